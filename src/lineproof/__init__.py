@@ -1,0 +1,1 @@
+"""A calculation package in which every line can be proved."""

@@ -1,0 +1,21 @@
+"""Figures of a beam calculation: pure functions from plain numbers to drawings."""
+
+from __future__ import annotations
+
+from lineproof.beams.figure_capacity import capacity_figure, stress_strain_figure
+from lineproof.beams.figure_loading import UniformLoad, loading_figure
+from lineproof.beams.figure_section import BarRow, SectionShape, section_figure
+from lineproof.beams.figure_strain import Force, StressState, strain_stress_figure
+
+__all__ = [
+    "BarRow",
+    "Force",
+    "SectionShape",
+    "StressState",
+    "UniformLoad",
+    "capacity_figure",
+    "loading_figure",
+    "section_figure",
+    "strain_stress_figure",
+    "stress_strain_figure",
+]

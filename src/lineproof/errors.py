@@ -1,0 +1,56 @@
+"""Errors a user can cause, each with all its faults and an exit code."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+
+class UserError(ValueError):
+    """Wrong input: says what was given and what to type instead, all faults at once.
+
+    ``faults`` holds one sentence per fault. Shown without a traceback; exit code 2.
+
+    >>> str(UserError(["span: '7.6' has no unit; write '7.6 m'"]))
+    "span: '7.6' has no unit; write '7.6 m'"
+    """
+
+    exit_code = 2
+
+    def __init__(self, faults: str | Iterable[str]) -> None:
+        self.faults: tuple[str, ...] = (faults,) if isinstance(faults, str) else tuple(faults)
+        super().__init__("\n".join(self.faults))
+
+    def __reduce__(self) -> tuple[type[UserError], tuple[tuple[str, ...]]]:
+        """Survive a process border with the faults kept apart."""
+        return type(self), (self.faults,)
+
+    def _render_traceback_(self) -> list[str]:
+        """Show only the faults in a notebook (IPython asks for this method)."""
+        return [f"Wrong input: {fault}" for fault in self.faults]
+
+
+class FaultList:
+    """Collect faults and raise them together.
+
+    >>> faults = FaultList()
+    >>> faults.add("h: '-620 mm' is negative; write a positive length")
+    >>> faults.raise_if_any()
+    Traceback (most recent call last):
+    lineproof.errors.UserError: h: '-620 mm' is negative; write a positive length
+    """
+
+    def __init__(self) -> None:
+        self.faults: list[str] = []
+
+    def add(self, fault: str) -> None:
+        """Note one fault."""
+        self.faults.append(fault)
+
+    def take(self, error: UserError) -> None:
+        """Note all faults of a caught error."""
+        self.faults.extend(error.faults)
+
+    def raise_if_any(self) -> None:
+        """Raise one :class:`UserError` with every fault noted so far."""
+        if self.faults:
+            raise UserError(self.faults)

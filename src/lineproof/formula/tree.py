@@ -1,0 +1,79 @@
+"""The expression tree: the author's order, kept as written, for printing and for computing.
+
+A tree is plain frozen data. ``typeset`` prints it, ``compiled`` turns it into a function,
+``algebra`` derives the sympy form from it; none of them changes it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True, slots=True)
+class Number:
+    """A constant, kept as the author typed it (``0.0015``)."""
+
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Name:
+    """A quantity, by its id (``phi_s``)."""
+
+    id: str
+
+
+@dataclass(frozen=True, slots=True)
+class Negative:
+    """The expression with its sign changed."""
+
+    of: Tree
+
+
+@dataclass(frozen=True, slots=True)
+class Binary:
+    """Two expressions joined by ``+ - * / **``."""
+
+    op: str
+    left: Tree
+    right: Tree
+
+
+@dataclass(frozen=True, slots=True)
+class Call:
+    """A function of the grammar applied to its arguments."""
+
+    function: str
+    args: tuple[Tree, ...]
+
+
+Tree = Number | Name | Negative | Binary | Call
+
+PRECEDENCE = {"+": 1, "-": 1, "*": 2, "/": 2, "**": 4}
+"""Binding strength of the operators; a sign binds between ``/`` and ``**``."""
+SIGN_PRECEDENCE = 3
+
+
+def walk(tree: Tree) -> Iterator[Tree]:
+    """Give every node of the tree, left to right, parents first."""
+    yield tree
+    match tree:
+        case Negative(of):
+            yield from walk(of)
+        case Binary(_, left, right):
+            yield from walk(left)
+            yield from walk(right)
+        case Call(_, args):
+            for arg in args:
+                yield from walk(arg)
+
+
+def names_of(tree: Tree) -> tuple[str, ...]:
+    """Return the ids of the tree's quantities, each once, in order of appearance."""
+    return tuple(dict.fromkeys(node.id for node in walk(tree) if isinstance(node, Name)))
+
+
+def numbers_of(tree: Tree) -> tuple[str, ...]:
+    """Return the texts of the tree's constants, each once, in order of appearance."""
+    return tuple(dict.fromkeys(node.text for node in walk(tree) if isinstance(node, Number)))

@@ -1,0 +1,236 @@
+"""Parts in a notebook: HTML with TeX, plain text, and an anchor by which an exporter finds them.
+
+JupyterLab shows untrusted HTML without MathML and SVG but keeps their text, so that a fraction
+a/2 = 26 reads "a2=26". TeX between ``\\( \\)``, tables and pictures as data URIs survive.
+"""
+
+from __future__ import annotations
+
+import base64
+import hashlib
+from collections.abc import Mapping
+from html import escape
+from typing import Any
+
+from lineproof.drawing import from_json, svg
+from lineproof.record import digest_of
+from lineproof.sheet import PartView, Sheet
+from lineproof.typeset import number_text, plain, printable, tex
+from lineproof.typeset.chains import Chain
+from lineproof.typeset.measure import broken
+from lineproof.typeset.nodes import Math, Word, row
+from lineproof.typeset.rows import PrintedRow, PrintedTable, notation_of, printed_row
+
+ANCHOR = "application/vnd.lineproof.part+json"
+METADATA = "lineproof"
+_WIDEST = 34.0  # em; a longer formula breaks before one of its signs
+_CELL = "text-align:left;vertical-align:top"
+_NO_TEX = 'class="mathjax_ignore"'  # a "$" in a title must stay a "$"
+
+Bundle = tuple[dict[str, Any], dict[str, Any]]
+
+
+def register() -> bool:
+    """Show every part that closes under its cell, if this is a notebook; tell whether it is."""
+    shell = _shell()
+    if shell is not None:
+        Sheet.shown = show
+    return shell is not None
+
+
+def show(view: PartView) -> None:
+    """Display a part under the running cell."""
+    from IPython.display import display  # noqa: PLC0415 - only inside IPython
+
+    data, metadata = bundle(view, ran=_cells_run(_shell()))
+    display(data, metadata=metadata, raw=True)  # type: ignore[no-untyped-call]
+
+
+def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:
+    """Return the MIME bundle of a part and its metadata.
+
+    ``ran`` holds the hashes of the cells run so far. They stand in the metadata with the part's
+    digest, so that a reader can tell outputs that are older than their cell.
+    """
+    record = view.sheet.view(_up_to(view))
+    part = record["parts"][-1]
+    data = part_bundle(record, part)
+    note = {"part": part_digest(part), "cells": ran or []}
+    return data, {METADATA: note}
+
+
+def part_bundle(record: Mapping[str, Any], part: Mapping[str, Any]) -> dict[str, Any]:
+    """Return what a part of a record looks like in a notebook, by MIME type."""
+    notation = notation_of(record)
+    labels = {e["id"]: e.get("label", "") for p in record["parts"] for e in p["entries"]}
+    rows = [printed_row(entry, notation, labels) for entry in part["entries"]]
+    return {
+        ANCHOR: {"part": part["key"]},
+        "text/html": _html(part, rows),
+        "text/plain": _plain(part, rows),
+    }
+
+
+def part_digest(part: Mapping[str, Any]) -> str:
+    """Hash what a part was made from; no computed number enters."""
+    return digest_of(*[f"{entry['id']}:{entry['digest']}" for entry in part["entries"]])
+
+
+def cell_hash(source: str) -> str:
+    """Hash a cell's source, without white space at its ends."""
+    return hashlib.sha256(source.strip().encode()).hexdigest()[:12]
+
+
+def _up_to(view: PartView) -> list[Any]:
+    parts = list(view.sheet.parts)
+    keys = [part.key for part in parts]
+    return parts[: keys.index(view.key) + 1]
+
+
+def _shell() -> Any:
+    import sys  # noqa: PLC0415 - beside its only use
+
+    ipython = sys.modules.get("IPython")
+    return ipython.get_ipython() if ipython is not None else None
+
+
+def _cells_run(shell: Any) -> list[str]:
+    if shell is None:
+        return []
+    sources = [source for source in shell.history_manager.input_hist_raw if source.strip()]
+    return list(dict.fromkeys(map(cell_hash, sources)))
+
+
+# -- plain text ------------------------------------------------------------------------------
+
+
+def _plain(part: Mapping[str, Any], rows: list[PrintedRow]) -> str:
+    blocks = [f"{part['label']}  {printable(part['title'])}"]
+    for printed in rows:
+        marks = [printed.label, f"[{printable(printed.clause)}]" if printed.clause else ""]
+        head = "  ".join(mark for mark in marks if mark)
+        body = printed.plain.split("\n") if printed.plain else []
+        if printed.ratio:
+            body.append(f"ratio {printed.ratio}")
+        body += _plain_table(printed.table)
+        body += [text for text in (printed.caption, *printed.remarks) if text]
+        blocks.append("\n    ".join([head, *map(printable, body)] if head else body))
+    return "\n".join(blocks)
+
+
+def _plain_table(table: PrintedTable | None) -> list[str]:
+    if table is None:
+        return []
+    lines = [[_heading_text(column) for column in table.columns], *map(list, table.rows)]
+    widths = [max(len(line[place]) for line in lines) for place in range(len(table.columns))]
+    return [
+        "  ".join(
+            cell.rjust(width) if numeric else cell.ljust(width)
+            for cell, width, numeric in zip(line, widths, table.numeric, strict=True)
+        ).rstrip()
+        for line in lines
+    ]
+
+
+def _heading_text(column: Math) -> str:
+    return plain(column)
+
+
+# -- HTML with TeX ---------------------------------------------------------------------------
+
+
+def _html(part: Mapping[str, Any], rows: list[PrintedRow]) -> str:
+    title = f"{part['label']} {part['title']}"
+    body = "".join(map(_row_html, rows))
+    return (
+        f"<p><strong {_NO_TEX}>{_text(title)}</strong></p>\n"
+        f'<table style="width:100%"><thead><tr><th style="{_CELL}">Line, clause</th>'
+        f'<th style="{_CELL}">Working</th><th style="{_CELL}">Result</th></tr></thead>'
+        f"<tbody>{body}</tbody></table>"
+    )
+
+
+def _row_html(printed: PrintedRow) -> str:
+    place = [_text(mark) for mark in (printed.label, printed.clause) if mark]
+    return (
+        f'\n<tr><td {_NO_TEX} style="{_CELL}">{"<br>".join(place)}</td>'
+        f'<td style="{_CELL}">{"<br>".join(_working(printed))}</td>'
+        f'<td style="{_CELL}">{"<br>".join(_result(printed))}</td></tr>'
+    )
+
+
+def _working(printed: PrintedRow) -> list[str]:
+    lines = [_span(printed.title)] if printed.title and printed.figure is None else []
+    for chain in printed.chains:
+        lines += _chain(chain)
+    if printed.figure is not None:
+        lines += [_picture(printed), f"<em {_NO_TEX}>{_text(printed.caption)}</em>"]
+    if printed.table is not None:
+        lines.append(_table(printed.table))
+    lines += [_span(text) for text in (printed.text, printed.conclusion) if text]
+    return lines + [f"<small {_NO_TEX}>{_text(remark)}</small>" for remark in printed.remarks]
+
+
+def _result(printed: PrintedRow) -> list[str]:
+    lines = [_tex(printed.result)] if printed.result is not None else []
+    if printed.verdict:
+        tag = "span" if printed.holds else "strong"
+        lines.append(f"<{tag} {_NO_TEX}>{_text(printed.verdict)}</{tag}>")
+    if printed.ratio:
+        lines.append(_span(f"ratio {printed.ratio}"))
+    return lines
+
+
+def _chain(chain: Chain) -> list[str]:
+    first, *rest = chain.pieces or (Word(""),)
+    lines = [*broken(row([chain.head, first]), _WIDEST)]
+    for piece in rest:
+        lines += broken(piece, _WIDEST)
+    shown = [_tex(line) for line in lines]
+    if chain.lead:
+        shown[0] = f"{_span(chain.lead + ':')} {shown[0]}"
+    return shown
+
+
+def _tex(math: Math) -> str:
+    return rf"\(\displaystyle {escape(tex(math))}\)"
+
+
+def _text(text: str) -> str:
+    return escape(printable(text))
+
+
+def _span(text: str) -> str:
+    return f"<span {_NO_TEX}>{_text(text)}</span>"
+
+
+def _picture(printed: PrintedRow) -> str:
+    drawn = svg(from_json(printed.figure or {})).encode()
+    address = "data:image/svg+xml;base64," + base64.b64encode(drawn).decode()
+    return f'<img src="{address}" alt="{_text(printed.alt)}" style="max-width:100%">'
+
+
+def _table(table: PrintedTable) -> str:
+    sides = ["text-align:right" if numeric else "text-align:left" for numeric in table.numeric]
+    head = "".join(
+        f'<th style="{side}">{_heading(column)}</th>'
+        for column, side in zip(table.columns, sides, strict=True)
+    )
+    body = "".join(
+        "<tr>"
+        + "".join(
+            f'<td {_NO_TEX} style="{side}">{_text(cell)}</td>'
+            for cell, side in zip(line, sides, strict=True)
+        )
+        + "</tr>"
+        for line in table.rows
+    )
+    return f"<table><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>"
+
+
+def _heading(column: Math) -> str:
+    return _span(column.text) if isinstance(column, Word) else _tex(column)
+
+
+__all__ = ["ANCHOR", "METADATA", "bundle", "cell_hash", "number_text", "part_bundle", "part_digest",
+           "register", "show"]  # fmt: skip

@@ -1,0 +1,16 @@
+"""The printed package: model, HTML, PDF, and the records read back out of them."""
+
+from lineproof.package.html import to_html
+from lineproof.package.model import Package, build_package
+from lineproof.package.pdf import PrintError, to_pdf
+from lineproof.package.read import records_in_html, records_in_pdf
+
+__all__ = [
+    "Package",
+    "PrintError",
+    "build_package",
+    "records_in_html",
+    "records_in_pdf",
+    "to_html",
+    "to_pdf",
+]

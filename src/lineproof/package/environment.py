@@ -1,0 +1,214 @@
+"""The two jinja2 environments: HTML escapes, Typst interns.
+
+In the Typst template nothing but ``t.at(n)`` is ever written: every text and every maths tree goes
+into one JSON list that Typst reads as data. So no user text can become Typst source.
+"""
+
+from __future__ import annotations
+
+import base64
+import json
+import re
+import threading
+from dataclasses import dataclass, field
+from functools import cache
+from typing import TYPE_CHECKING, Any
+from urllib.parse import quote
+
+from lineproof.package.layout import cut, fitted, fitted_result
+from lineproof.package.prose import Prose, prose_html, prose_tree
+from lineproof.resources import folder
+from lineproof.typeset.glyphs import printable
+from lineproof.typeset.mathml import mathml
+from lineproof.typeset.nodes import (
+    Digits,
+    Fence,
+    Fraction,
+    Letter,
+    Math,
+    Prime,
+    Root,
+    Row,
+    Scripts,
+    Sign,
+    Thin,
+    Unit,
+    Word,
+)
+from lineproof.typeset.plain import plain
+from lineproof.typeset.typst_tree import typst_tree
+
+if TYPE_CHECKING:
+    import jinja2
+
+    from lineproof.package.model import Calc
+
+_NODES = (
+    Digits, Fence, Fraction, Letter, Prime, Root, Row, Scripts, Sign, Thin, Unit, Word,
+)  # fmt: skip
+_LONG_WORD = re.compile(r"\S{40}")
+
+
+@dataclass(frozen=True, slots=True)
+class Verbatim:
+    """Data that must reach the file unchanged: a record, a drawing."""
+
+    text: str
+
+
+@dataclass
+class Interned:
+    """The texts and trees of one document, in the order of their first use."""
+
+    items: list[Any] = field(default_factory=list)
+    places: dict[str, int] = field(default_factory=dict)
+    long_words: bool = False
+
+    def place(self, value: object) -> str:
+        """Store a text or tree and return the only thing the template may print: ``t.at(n)``."""
+        match value:
+            case Verbatim(text):
+                return self._at(text, text)
+            case str():
+                text = printable(value)
+                self.long_words = self.long_words or _LONG_WORD.search(text) is not None
+                return self._at(text, text)
+            case Prose(blocks):
+                return self._add([prose_tree(block) for block in blocks])
+        if isinstance(value, _NODES):
+            return self._add(typst_tree(value))
+        msg = f"{type(value).__name__} in the Typst template; only text, maths and prose are printed"
+        raise TypeError(msg)
+
+    def _at(self, key: str, item: str) -> str:
+        known = self.places.get(key)
+        if known is None:
+            known = self.places[key] = len(self.items)
+            self.items.append(item)
+        return f"t.at({known})"
+
+    def _add(self, item: Any) -> str:
+        self.items.append(item)
+        return f"t.at({len(self.items) - 1})"
+
+    def to_json(self) -> str:
+        """Return the list as ASCII JSON."""
+        return json.dumps(self.items, ensure_ascii=True, allow_nan=False)
+
+
+_local = threading.local()
+
+
+def html_environment() -> jinja2.Environment:
+    """Return this thread's HTML environment."""
+    made: jinja2.Environment | None = getattr(_local, "html", None)
+    if made is None:
+        made = _local.html = _html_environment()
+    return made
+
+
+def typst_environment() -> jinja2.Environment:
+    """Return this thread's Typst environment."""
+    made: jinja2.Environment | None = getattr(_local, "typst", None)
+    if made is None:
+        made = _local.typst = _typst_environment()
+    return made
+
+
+def _loader() -> jinja2.BaseLoader:
+    import jinja2  # noqa: PLC0415 - 0.05 s, only printing needs it
+
+    return jinja2.FileSystemLoader(folder("templates"))
+
+
+def _typst_environment() -> jinja2.Environment:
+    import jinja2  # noqa: PLC0415
+
+    @jinja2.pass_context
+    def intern(context: jinja2.runtime.Context, value: object) -> str:
+        interned: Interned = context["interned"]
+        return interned.place(value)
+
+    environment = jinja2.Environment(
+        loader=_loader(),
+        autoescape=False,  # noqa: S701 - finalize interns every value, nothing is escaped
+        finalize=intern,
+        undefined=jinja2.StrictUndefined,
+        trim_blocks=True,
+        lstrip_blocks=True,
+    )
+    environment.filters.update(_filters())
+    return environment
+
+
+def _html_environment() -> jinja2.Environment:
+    import jinja2  # noqa: PLC0415
+    from markupsafe import Markup  # noqa: PLC0415
+
+    def finish(value: object) -> object:
+        if isinstance(value, Markup):
+            return value
+        if isinstance(value, str):
+            return printable(value)
+        if isinstance(value, _NODES):
+            return Markup(mathml(value))  # noqa: S704 - the writer escapes its texts
+        if isinstance(value, Prose):
+            return Markup(prose_html(value))  # noqa: S704 - the writer escapes its texts
+        msg = f"{type(value).__name__} in the HTML template; only text, maths and prose are printed"
+        raise TypeError(msg)
+
+    environment = jinja2.Environment(
+        loader=_loader(),
+        autoescape=True,
+        finalize=finish,
+        undefined=jinja2.StrictUndefined,
+        trim_blocks=True,
+        lstrip_blocks=True,
+    )
+    environment.filters.update(_filters())
+    environment.filters.update(
+        script_json=lambda text: Markup(_script_json(text)),  # noqa: S704 - every < is escaped
+        css_text=lambda text: Markup(_css_text(text)),  # noqa: S704 - all but letters is escaped
+        anchor=lambda text: quote(text, safe="/-_.~"),
+    )
+    environment.globals["font_data"] = lambda name: Markup(font_data(name))  # noqa: S704 - base64
+    return environment
+
+
+def _filters() -> dict[str, Any]:
+    return {
+        "plain": plain,
+        "fitted": fitted,
+        "fitted_result": fitted_result,
+        "cut": cut,
+        "sentence": lambda text: text[:1].upper() + text[1:],
+        "yes_no": lambda truth: "yes" if truth else "no",
+        "verdict": _verdict,
+        "covered_text": lambda item: f"{item.check} ({item.clause})" if item.clause else item.check,
+    }
+
+
+def _verdict(calc: Calc) -> str:
+    """Say in one sentence whether the calc's checks hold."""
+    count, failed = len(calc.summary), len(calc.failures)
+    if failed:
+        return f"{failed} of {count} checks {'does' if failed == 1 else 'do'} not hold."
+    return "The one check holds." if count == 1 else f"All {count} checks hold."
+
+
+def _script_json(text: str) -> str:
+    """Escape JSON for a script element: no tag and no comment can begin in it."""
+    return text.replace("<", "\\u003c").replace(">", "\\u003e").replace("&", "\\u0026")
+
+
+def _css_text(text: str) -> str:
+    """Return text for the inside of a CSS string, everything but plain letters by its code."""
+    return "".join(
+        c if c.isascii() and c.isalnum() else f"\\{ord(c):06x}" for c in printable(text)
+    )
+
+
+@cache
+def font_data(name: str) -> str:
+    """Return a font file of the templates as base64 text."""
+    return base64.b64encode((folder("templates") / "fonts" / name).read_bytes()).decode("ascii")

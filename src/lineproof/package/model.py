@@ -1,0 +1,282 @@
+"""The package: what is printed, in which order, as plain data that HTML and PDF both lay out."""
+
+from __future__ import annotations
+
+import json
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass
+from typing import Any
+
+from lineproof.errors import FaultList, UserError
+from lineproof.package.facts import ProjectFacts, project_facts
+from lineproof.package.prose import Mark, Prose, read_prose
+from lineproof.package.summary import (
+    Confirmation,
+    Failure,
+    LoadRow,
+    NotationRow,
+    SummaryRow,
+    confirmations,
+    failures,
+    load_rows,
+    notation_rows,
+    summary_rows,
+)
+from lineproof.typeset.glyphs import tree_has_missing
+from lineproof.typeset.nodes import EQUALS, Math, row
+from lineproof.typeset.rows import PrintedRow, notation_of, printed_row
+from lineproof.typeset.values import symbol_math, symbol_of, value_math
+
+Walk = Iterable[tuple[str, str]]
+"""Blocks of a calc in order: ``("prose", markdown)`` and ``("part", key)``."""
+
+CAUTIONS = (
+    "This package is not valid until it has been reviewed and sealed by the licensed engineer "
+    "responsible for the work.",
+    "The purchased standard, the local building code and its amendments govern; clause numbers "
+    "here point to them and do not replace them.",
+    "Gravity beams only: the members of this package are not part of the lateral-load system.",
+    "Values and rules given from memory or as common practice are listed under "
+    "“Values to confirm” and must be confirmed in the office's own copy of the standard.",
+)
+
+
+@dataclass(frozen=True, slots=True)
+class PartBlock:
+    """A part of the working: its rows under its heading."""
+
+    key: str
+    anchor: str
+    label: str
+    title: str
+    rows: tuple[PrintedRow, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class ProseBlock:
+    """Prose between parts."""
+
+    prose: Prose
+
+
+@dataclass(frozen=True, slots=True)
+class NotCovered:
+    """A check that a complete calc holds and this one does not yet."""
+
+    check: str
+    clause: str
+
+
+@dataclass(frozen=True, slots=True)
+class Calc:
+    """One calculation of the package."""
+
+    id: str
+    title: str
+    anchor: str
+    member: str
+    digest: str
+    record_text: str
+    blocks: tuple[PartBlock | ProseBlock, ...]
+    summary: tuple[SummaryRow, ...]
+    loads: tuple[LoadRow, ...]
+    section: PrintedRow | None
+    loading: tuple[PrintedRow, ...]
+    failures: tuple[Failure, ...]
+    confirm: tuple[Confirmation, ...]
+    scope: str
+    not_covered: tuple[NotCovered, ...]
+    marks: Mapping[str, tuple[str, ...]]
+
+
+@dataclass(frozen=True, slots=True)
+class Package:
+    """A whole package: the project's facts once, then one or many calcs."""
+
+    title: str
+    facts: ProjectFacts
+    calcs: tuple[Calc, ...]
+    notation: tuple[NotationRow, ...]
+    missing_glyphs: bool
+    cautions: tuple[str, ...] = CAUTIONS
+
+    @property
+    def failures(self) -> tuple[Failure, ...]:
+        """The checks of all calcs that do not hold."""
+        return tuple(failure for calc in self.calcs for failure in calc.failures)
+
+    @property
+    def digest(self) -> str:
+        """The digests of all records, as the footer prints them."""
+        return " ".join(calc.digest for calc in self.calcs)
+
+
+def build_package(
+    records: Sequence[Any],
+    walks: Sequence[Walk | None] | None = None,
+    marks: Mapping[str, Sequence[str]] | None = None,
+) -> Package:
+    """Build the package of one or several records of one project.
+
+    ``records`` are records or their plain data; ``walks`` give each record's blocks (None: all
+    parts in order); ``marks`` are short notes printed beside the entry of that id.
+    Raises :class:`UserError` with all faults of prose and anchors at once.
+    """
+    data = [_plain_data(record) for record in records]
+    if not data:
+        raise UserError("package: no record; give at least one calc")
+    faults = FaultList()
+    calcs = []
+    for place, record in enumerate(data):
+        walk = walks[place] if walks is not None else None
+        prefix = f"{_slug(record['calc']['id'])}/" if len(data) > 1 else ""
+        calcs.append(_Builder(record, prefix, marks or {}, faults).calc(walk))
+    faults.raise_if_any()
+    first = data[0]
+    return Package(
+        title=calcs[0].title
+        if len(calcs) == 1
+        else first["project"].get("project", {}).get("name", ""),
+        facts=project_facts(first["project"], first["codes"]),
+        calcs=tuple(calcs),
+        notation=notation_rows(data),
+        missing_glyphs=any(tree_has_missing(record) for record in data),
+    )
+
+
+def _plain_data(record: Any) -> Mapping[str, Any]:
+    data: Mapping[str, Any] = record if isinstance(record, Mapping) else record.data
+    return data
+
+
+def _slug(text: str) -> str:
+    return (
+        "".join(c if c.isascii() and (c.isalnum() or c in "-_.") else "-" for c in text) or "calc"
+    )
+
+
+class _Builder:
+    """Builds one calc from its record."""
+
+    def __init__(
+        self,
+        record: Mapping[str, Any],
+        prefix: str,
+        marks: Mapping[str, Sequence[str]],
+        faults: FaultList,
+    ) -> None:
+        self.record = record
+        self.prefix = prefix
+        self.marks = marks
+        self.faults = faults
+        self.notation = notation_of(record)
+        self.entries = {e["id"]: e for part in record["parts"] for e in part["entries"]}
+        labels = {entry_id: e.get("label", "") for entry_id, e in self.entries.items()}
+        self.rows = {
+            entry_id: printed_row(entry, self.notation, labels)
+            for entry_id, entry in self.entries.items()
+        }
+
+    def calc(self, walk: Walk | None) -> Calc:
+        record, rows = self.record, list(self.rows.values())
+        status = record["status"]
+        figures = [r for r in rows if r.kind == "figure"]
+        return Calc(
+            id=record["calc"]["id"],
+            title=record["calc"].get("title", ""),
+            anchor=self.prefix,
+            member=record.get("kind_of_member", ""),
+            digest=record["digest"],
+            record_text=_json(record),
+            blocks=self._blocks(walk),
+            summary=summary_rows(self.entries, self.rows, self.notation, self.prefix),
+            loads=load_rows(record["parts"], self.rows, self.prefix),
+            section=next((f for f in figures if f.id.endswith("/section")), None),
+            loading=tuple(f for f in figures if f.id.endswith(("/plan", "/loading"))),
+            failures=failures(record, self.rows, self.prefix),
+            confirm=confirmations(record, self.rows, self.prefix),
+            scope=status.get("scope", ""),
+            not_covered=tuple(
+                NotCovered(item["check"], item.get("clause", ""))
+                for item in status.get("not_covered", [])
+            ),
+            marks={entry_id: tuple(notes) for entry_id, notes in self.marks.items()},
+        )
+
+    def _blocks(self, walk: Walk | None) -> tuple[PartBlock | ProseBlock, ...]:
+        parts = {part["key"]: part for part in self.record["parts"]}
+        steps = list(walk) if walk is not None else [("part", key) for key in parts]
+        self._check_anchors([key for kind, key in steps if kind == "part"], parts)
+        blocks: list[PartBlock | ProseBlock] = []
+        values = self._values()
+        for kind, content in steps:
+            if kind == "part" and content in parts:
+                blocks.append(self._part(parts[content]))
+            elif kind == "prose":
+                self._add_prose(content, values, blocks)
+        return tuple(blocks)
+
+    def _check_anchors(self, anchors: list[str], parts: Mapping[str, Any]) -> None:
+        calc = self.record["calc"]["id"]
+        for key in dict.fromkeys(anchors):
+            if key not in parts:
+                self.faults.add(
+                    f"{calc}: part {key!r} is shown but not in the record; run the calc again"
+                )
+            elif anchors.count(key) > 1:
+                self.faults.add(f"{calc}: part {key!r} is shown twice; remove one of the outputs")
+        for key in parts:
+            if key not in anchors:
+                self.faults.add(
+                    f"{calc}: part {key!r} is in the record but not shown; run the calc again"
+                )
+
+    def _add_prose(
+        self, markdown: str, values: Mapping[str, Math], blocks: list[PartBlock | ProseBlock]
+    ) -> None:
+        try:
+            prose = read_prose(markdown, values)
+        except UserError as error:
+            self.faults.take(error)
+            return
+        if prose.blocks:
+            blocks.append(ProseBlock(_levelled(prose, under_part=bool(blocks))))
+
+    def _values(self) -> dict[str, Math]:
+        """Give symbol = value for every full id and for every symbol that stands once."""
+        values: dict[str, Math] = {}
+        bare: dict[str, list[Math]] = {}
+        for entry_id, entry in self.entries.items():
+            printed = entry.get("printed") or {}
+            if "result" in printed:
+                symbol = symbol_math(symbol_of(entry["symbol"], self.notation))
+                math = row([symbol, EQUALS, value_math(printed["result"], printed["unit"])])
+                values[entry_id] = math
+                bare.setdefault(entry["symbol"], []).append(math)
+        return values | {symbol: maths[0] for symbol, maths in bare.items() if len(maths) == 1}
+
+    def _part(self, part: Mapping[str, Any]) -> PartBlock:
+        return PartBlock(
+            key=part["key"],
+            anchor=f"{self.prefix}part-{part['key']}",
+            label=part.get("label", ""),
+            title=part.get("title", ""),
+            rows=tuple(self.rows[entry["id"]] for entry in part["entries"]),
+        )
+
+
+def _levelled(prose: Prose, *, under_part: bool) -> Prose:
+    """Fit prose headings under the package's own, without leaving a level out."""
+    level = 3 if under_part else 2
+    blocks: list[Mark] = []
+    for mark in prose.blocks:
+        if mark.kind == "heading":
+            level = min(max(mark.level, 3), level + 1, 4)
+            blocks.append(Mark("heading", children=mark.children, level=level))
+        else:
+            blocks.append(mark)
+    return Prose(tuple(blocks))
+
+
+def _json(record: Mapping[str, Any]) -> str:
+    return json.dumps(record, ensure_ascii=False, allow_nan=False, separators=(",", ":"))

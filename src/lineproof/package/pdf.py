@@ -1,0 +1,109 @@
+"""The package as a PDF: archival (PDF/A-3a), accessible (PDF/UA-1), with its records attached."""
+
+from __future__ import annotations
+
+import datetime
+import tempfile
+import threading
+from functools import cache
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
+
+from lineproof.package.environment import Interned, Verbatim, typst_environment
+from lineproof.package.figures import drawing, paper_width
+from lineproof.package.model import Package
+from lineproof.resources import folder
+from lineproof.typeset.glyphs import MISSING_NOTE
+
+if TYPE_CHECKING:
+    import typst
+
+MIME = "application/vnd.lineproof.record+json"
+STANDARDS = ["a-3a", "ua-1"]
+_local = threading.local()
+
+
+class PrintError(RuntimeError):
+    """The package could not be printed: a fault of a template, not of the user's input."""
+
+
+def to_pdf(package: Package) -> bytes:
+    """Print a package; the same package gives the same bytes."""
+    source, texts = typst_source(package)
+    return compile_pdf(source, texts, package.facts.date)
+
+
+def typst_source(package: Package) -> tuple[str, str]:
+    """Return the Typst source, which holds no user text, and the JSON list of its texts."""
+    interned = Interned()
+    template = typst_environment().get_template("package.typ.j2")
+    source = template.render(
+        package=package,
+        interned=interned,
+        drawing=drawing,
+        paper_width=paper_width,
+        verbatim=Verbatim,
+        missing_note=MISSING_NOTE,
+        record_mime=MIME,
+        year=str(package.facts.date.year),
+        month=str(package.facts.date.month),
+        day=str(package.facts.date.day),
+    )
+    if interned.long_words:
+        source = "#let break-long-words = true\n" + source
+    else:
+        source = "#let break-long-words = false\n" + source
+    return source, interned.to_json()
+
+
+def compile_pdf(source: str, texts: str, date: datetime.date) -> bytes:
+    """Compile Typst source with its texts; a warning is a failure."""
+    import typst  # noqa: PLC0415 - only printing needs it
+
+    moment = datetime.datetime(date.year, date.month, date.day, tzinfo=datetime.UTC)
+    try:
+        made, warnings = _compiler().compile_with_warnings(
+            {"main.typ": source.encode(), "maths.typ": _library("maths.typ")},
+            format="pdf",
+            sys_inputs={"texts": texts},
+            pdf_standards=list(STANDARDS),
+            timestamp=moment,
+        )
+    except typst.TypstError as error:
+        raise PrintError(f"Typst: {error.message}\n{error.diagnostic}") from error
+    if warnings:
+        raise PrintError("Typst: " + "; ".join(warning.message for warning in warnings))
+    return bytes(made)
+
+
+@cache
+def _library(name: str) -> bytes:
+    return (folder("templates") / name).read_bytes()
+
+
+@cache
+def _empty_root() -> Path:
+    """Return a folder with nothing in it: what a template cannot see it cannot print."""
+    return Path(tempfile.mkdtemp(prefix="lineproof-"))
+
+
+def _compiler() -> Any:
+    """Return this thread's compiler; one compiler cannot serve two threads at once."""
+    made = getattr(_local, "compiler", None)
+    if made is None:
+        import typst  # noqa: PLC0415
+
+        made = _local.compiler = typst.Compiler(root=str(_empty_root()), font_paths=_fonts())
+    return made
+
+
+@cache
+def _fonts() -> typst.Fonts:
+    """Return the fonts bundled with Typst and our own; never those of the machine."""
+    import typst  # noqa: PLC0415
+
+    return typst.Fonts(
+        include_system_fonts=False,
+        include_embedded_fonts=True,
+        font_paths=[str(folder("templates") / "fonts")],
+    )

@@ -1,0 +1,87 @@
+"""Records out of printed packages: nothing in a file is run, damage is named."""
+
+from __future__ import annotations
+
+import io
+import json
+import re
+from typing import Any
+
+from lineproof.errors import UserError
+
+LARGEST_RECORD = 32_000_000
+_MIME = "application/vnd.lineproof.record+json"
+_SCRIPT = re.compile(
+    rf'<script type="{re.escape(_MIME)}"[^>]*>(.*?)</script>', re.DOTALL | re.IGNORECASE
+)
+_SUFFIX = ".lineproof.json"
+
+
+def records_in_html(text: str) -> list[dict[str, Any]]:
+    """Return the records inside an HTML package, in order; raises :class:`UserError`."""
+    found = [_record(match[1], f"record {n}") for n, match in enumerate(_SCRIPT.finditer(text), 1)]
+    if not found:
+        raise UserError("no record in this HTML file; give a package that lineproof has printed")
+    return _each_once(found)
+
+
+def records_in_pdf(content: bytes) -> list[dict[str, Any]]:
+    """Return the records attached to a PDF package, in order; raises :class:`UserError`."""
+    found = []
+    for name, data in _attachments(content):
+        if not name.endswith(_SUFFIX):
+            continue
+        try:
+            text = data.decode("utf-8")
+        except UnicodeDecodeError:
+            raise UserError(f"attachment {name[:60]!r} is damaged: not UTF-8 text") from None
+        found.append(_record(text, f"attachment {name[:60]!r}"))
+    if not found:
+        raise UserError(
+            "no record is attached to this PDF; give a package that lineproof has printed "
+            "(printing it again to PDF drops the attachment)"
+        )
+    return _each_once(found)
+
+
+def _attachments(content: bytes) -> list[tuple[str, bytes]]:
+    import pypdf  # noqa: PLC0415 - only reading a PDF needs it
+    import pypdf.errors  # noqa: PLC0415
+
+    try:
+        reader = pypdf.PdfReader(io.BytesIO(content))
+        if reader.is_encrypted:
+            raise UserError("this PDF is encrypted; give it without a password")
+        return [
+            (name, part)
+            for name, parts in reader.attachments.items()
+            for part in parts
+            if len(part) <= LARGEST_RECORD
+        ]
+    except UserError:
+        raise
+    # A damaged file makes the reader fail in any of its layers.
+    except Exception as error:  # noqa: BLE001
+        reason = f"{type(error).__name__}: {error}"[:80]
+        raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
+
+
+def _record(text: str, name: str) -> dict[str, Any]:
+    if len(text) > LARGEST_RECORD:
+        raise UserError(f"{name} is larger than {LARGEST_RECORD // 1_000_000} MB; not read")
+    try:
+        data = json.loads(text)
+    except (ValueError, RecursionError) as error:
+        raise UserError(f"{name} is damaged: not readable as JSON ({str(error)[:60]})") from None
+    if not isinstance(data, dict) or not isinstance(data.get("calc"), dict):
+        raise UserError(f"{name} is damaged: not a record of a calculation")
+    return data
+
+
+def _each_once(found: list[dict[str, Any]]) -> list[dict[str, Any]]:
+    ids = [str(record["calc"].get("id")) for record in found]
+    twice = sorted({calc for calc in ids if ids.count(calc) > 1})
+    if twice:
+        names = ", ".join(repr(calc[:40]) for calc in twice)
+        raise UserError(f"two records of calc {names} in one file; give each calc once")
+    return found

@@ -1,0 +1,187 @@
+"""The tables that gather a record: checks, failures, load take-down, notation, values to confirm."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from typing import Any
+
+from lineproof.formula.grammar import parse_criterion
+from lineproof.formula.notation import Notation
+from lineproof.formula.tree import Name, Tree
+from lineproof.typeset.nodes import EQUALS, Math, row
+from lineproof.typeset.rows import PrintedRow, notation_of
+from lineproof.typeset.values import symbol_math, unit_text, value_math
+from lineproof.typeset.visitor import formula_math
+
+Rows = Mapping[str, PrintedRow]
+_LONGEST_SYMBOL = 24
+
+
+@dataclass(frozen=True, slots=True)
+class SummaryRow:
+    """A check on the summary page; ``governs`` marks the highest ratio."""
+
+    anchor: str
+    label: str
+    title: str
+    clause: str
+    demand: Math
+    resistance: Math
+    ratio: str
+    verdict: str
+    holds: bool
+    governs: bool
+
+
+@dataclass(frozen=True, slots=True)
+class Failure:
+    """A check that does not hold, for the cover."""
+
+    anchor: str
+    label: str
+    title: str
+    id: str
+    accepted: bool
+
+
+@dataclass(frozen=True, slots=True)
+class LoadRow:
+    """A line of the load take-down."""
+
+    anchor: str
+    label: str
+    title: str
+    result: Math
+    clause: str
+
+
+@dataclass(frozen=True, slots=True)
+class NotationRow:
+    """A symbol of the notation page."""
+
+    symbol: Math
+    meaning: str
+    unit: str
+
+
+@dataclass(frozen=True, slots=True)
+class Confirmation:
+    """A value or rule that the office confirms in its own copy; empty ``confirmed``: not yet."""
+
+    clause: str
+    what: str
+    basis: str
+    confirmed: str
+    lines: tuple[tuple[str, str], ...]
+
+
+def summary_rows(
+    entries: Mapping[str, Mapping[str, Any]], rows: Rows, notation: Notation, prefix: str
+) -> tuple[SummaryRow, ...]:
+    """Return every check: demand, resistance or limit, ratio, verdict."""
+    checks = [entry for entry in entries.values() if entry["kind"] == "check"]
+    ratios = [entry.get("utilisation") or 0.0 for entry in checks]
+    highest = max(ratios, default=0.0)
+    made = []
+    for entry, ratio in zip(checks, ratios, strict=True):
+        printed = rows[entry["id"]]
+        demand, resistance = _sides(entry, notation)
+        made.append(
+            SummaryRow(
+                anchor=prefix + entry["id"],
+                label=printed.label,
+                title=printed.title,
+                clause=printed.clause,
+                demand=demand,
+                resistance=resistance,
+                ratio=printed.ratio,
+                verdict=printed.verdict,
+                holds=printed.holds,
+                governs=highest > 0 and ratio == highest,
+            )
+        )
+    return tuple(made)
+
+
+def _sides(entry: Mapping[str, Any], notation: Notation) -> tuple[Math, Math]:
+    """Return demand and resistance; where the criterion asks for "at least", they swap sides."""
+    left, sign, right = parse_criterion(entry["formula"])
+    printed = entry["printed"]
+    sides = [
+        _named(tree, value_math(printed[side], printed.get("unit", "")), notation)
+        for tree, side in ((left, "left"), (right, "right"))
+    ]
+    return (sides[1], sides[0]) if sign in (">=", ">") else (sides[0], sides[1])
+
+
+def _named(tree: Tree, value: Math, notation: Notation) -> Math:
+    if not isinstance(tree, Name) or len(tree.id) > _LONGEST_SYMBOL:
+        return value
+    return row([formula_math(tree, notation), EQUALS, value])
+
+
+def failures(record: Mapping[str, Any], rows: Rows, prefix: str) -> tuple[Failure, ...]:
+    """Return the checks that do not hold, accepted exceptions included."""
+    listed = dict.fromkeys(record["status"].get("failed", []))
+    seen = {row_id: None for row_id, printed in rows.items() if not printed.holds}
+    return tuple(
+        Failure(
+            prefix + row_id,
+            rows[row_id].label,
+            rows[row_id].title,
+            row_id,
+            accepted=rows[row_id].verdict.startswith("accepted"),
+        )
+        for row_id in (listed | seen)
+        if row_id in rows
+    )
+
+
+def load_rows(parts: Sequence[Mapping[str, Any]], rows: Rows, prefix: str) -> tuple[LoadRow, ...]:
+    """Return the take-down: every value of the parts whose key begins with "loads"."""
+    made = []
+    for part in parts:
+        if not part["key"].startswith("loads"):
+            continue
+        for entry in part["entries"]:
+            printed = rows[entry["id"]]
+            if printed.result is not None:
+                made.append(
+                    LoadRow(
+                        prefix + printed.id,
+                        printed.label,
+                        printed.title,
+                        printed.result,
+                        printed.clause,
+                    )
+                )
+    return tuple(made)
+
+
+def notation_rows(records: Sequence[Mapping[str, Any]]) -> tuple[NotationRow, ...]:
+    """Return every symbol of all records once, in order of its letters."""
+    found = {}
+    for record in records:
+        for symbol in notation_of(record).values():
+            found.setdefault((symbol.id, symbol.meaning, symbol.unit), symbol)
+    ordered = sorted(found.values(), key=lambda s: (s.id.lower(), s.id, s.meaning))
+    return tuple(NotationRow(symbol_math(s), s.meaning, unit_text(s.unit)) for s in ordered)
+
+
+def confirmations(record: Mapping[str, Any], rows: Rows, prefix: str) -> tuple[Confirmation, ...]:
+    """Return the values to confirm, each with the labels and anchors of the lines it bears."""
+    return tuple(
+        Confirmation(
+            clause=item.get("clause", ""),
+            what=item.get("what", ""),
+            basis=item.get("basis", ""),
+            confirmed=item.get("confirmed", ""),
+            lines=tuple(
+                (prefix + line, rows[line].label or line)
+                for line in item.get("lines", [])
+                if line in rows
+            ),
+        )
+        for item in record.get("confirm", [])
+    )

@@ -1,0 +1,145 @@
+"""Digits for print: every printed line can be recomputed from what is printed.
+
+A printed number is a plain ASCII text that ``float`` reads back: ``7600``, ``-12.5``, ``5.00e9``.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
+from decimal import ROUND_HALF_EVEN, Context, Decimal
+
+START_DIGITS = 3
+MOST_DIGITS = 6
+_PLAIN_FROM, _PLAIN_BELOW = -4, 6
+_EXACT = Context(prec=40, rounding=ROUND_HALF_EVEN)
+
+
+def significant(value: float | Decimal, digits: int) -> Decimal:
+    """Return ``value`` rounded to ``digits`` significant digits."""
+    return Context(prec=digits, rounding=ROUND_HALF_EVEN).plus(Decimal(value))
+
+
+def number_text(number: Decimal) -> str:
+    """Return the printed text of a rounded decimal; powers of ten go by threes.
+
+    >>> number_text(Decimal("551000000")), number_text(Decimal("0.140")), number_text(Decimal(0))
+    ('551e6', '0.140', '0')
+    """
+    if not number:
+        return "0"
+    exponent = number.adjusted()
+    if _PLAIN_FROM <= exponent < _PLAIN_BELOW:
+        return f"{number:f}"
+    power = exponent - exponent % 3
+    return f"{number.scaleb(-power, _EXACT):f}e{power}"
+
+
+def rounded_text(value: float | Decimal, digits: int) -> str:
+    """Return ``value`` printed to ``digits`` significant digits.
+
+    >>> rounded_text(5e9, 3), rounded_text(0.00085, 3), rounded_text(2.5, 3)
+    ('5.00e9', '0.000850', '2.50')
+    """
+    number = significant(value, digits)
+    if number and number.adjusted() + 1 < digits:
+        number = number.quantize(Decimal(1).scaleb(number.adjusted() - digits + 1), context=_EXACT)
+    return number_text(number)
+
+
+def start_digits(value: float, unit: str) -> int:
+    """Return the digits a value starts with: three, and whole millimetres for sizes."""
+    if unit == "mm" and abs(value) >= 1000:  # noqa: PLR2004 - four digits before the point
+        return min(MOST_DIGITS, int(math.log10(abs(value))) + 1)
+    return START_DIGITS
+
+
+def digits_in(text: str) -> int:
+    """Return how many significant digits a printed number shows.
+
+    >>> digits_in("7600"), digits_in("0.140"), digits_in("5.00e9")
+    (4, 3, 3)
+    """
+    mantissa = text.lower().partition("e")[0].lstrip("+-").replace(".", "")
+    return len(mantissa.lstrip("0")) or 1
+
+
+def last_unit(value: float, digits: int) -> float:
+    """Return one unit of the last of ``digits`` significant digits of ``value``."""
+    return 10.0 ** (math.floor(math.log10(abs(value))) - digits + 1) if value else 0.0
+
+
+@dataclass(frozen=True, slots=True)
+class Argument:
+    """An argument of a printed line: its value, and either its exact print or its least digits."""
+
+    value: float
+    digits: int
+    exact: float | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Chosen:
+    """Significant digits per argument and for the result."""
+
+    args: tuple[int, ...]
+    result: int
+
+
+def choose_digits(
+    function: Callable[..., float], args: Sequence[Argument], result: float, unit: str
+) -> Chosen:
+    """Choose the fewest digits so that the printed arguments give the printed result.
+
+    Each number starts short. While the function of the printed arguments misses the printed
+    result by more than one unit of its last digit, the argument whose rounding moves the result
+    most gains a digit, to six at most; only when none is left does the result give one up.
+    """
+    digits = [a.digits for a in args]
+    result_digits = start_digits(result, unit)
+    while not _agrees(function, _printed(args, digits), result, result_digits):
+        longest = _most_moving(function, args, digits, result)
+        if longest is not None:
+            digits[longest] += 1
+        elif result_digits > 1:
+            result_digits -= 1
+        else:
+            break
+    return Chosen(tuple(digits), result_digits)
+
+
+def _printed(args: Sequence[Argument], digits: Sequence[int]) -> list[float]:
+    return [
+        a.exact if a.exact is not None else float(significant(a.value, n))
+        for a, n in zip(args, digits, strict=True)
+    ]
+
+
+def _agrees(
+    function: Callable[..., float], printed: Sequence[float], result: float, digits: int
+) -> bool:
+    shown = float(significant(result, digits))
+    missed = abs(_call(function, printed) - shown)
+    return missed <= last_unit(result, digits) * (1 + 1e-9)
+
+
+def _call(function: Callable[..., float], args: Sequence[float]) -> float:
+    try:
+        value = function(*args)
+    except (ArithmeticError, ValueError):
+        return math.inf
+    return value if isinstance(value, float) else math.inf
+
+
+def _most_moving(
+    function: Callable[..., float], args: Sequence[Argument], digits: Sequence[int], result: float
+) -> int | None:
+    exact = [a.value for a in args]
+    moves = []
+    for i, (argument, n) in enumerate(zip(args, digits, strict=True)):
+        if argument.exact is None and n < MOST_DIGITS:
+            alone = [*exact[:i], float(significant(argument.value, n)), *exact[i + 1 :]]
+            moves.append((abs(_call(function, alone) - result), -i))
+    best = max(moves, default=(0.0, 0))
+    return -best[1] if best[0] > 0 else None

@@ -1,0 +1,149 @@
+"""Reading a quantity as a person types it: ``"7.6 m"``."""
+
+from __future__ import annotations
+
+import math
+import re
+from dataclasses import dataclass
+from decimal import Decimal
+from typing import Protocol, runtime_checkable
+
+from lineproof.errors import UserError
+from lineproof.quantity.units import (
+    Unit,
+    example_unit,
+    factor,
+    unit_named,
+    units_of_kind,
+)
+
+_NUMBER = r"[+-]?(?:\d{1,15}(?:\.\d{0,15})?|\.\d{1,15})(?:[eE][+-]?\d{1,2})?"
+_TYPED = re.compile(rf"\s*({_NUMBER})(.*)\Z", re.DOTALL)
+_LONGEST_ECHO = 60
+
+
+@runtime_checkable
+class PintQuantity(Protocol):
+    """What we need of a quantity of any pint registry."""
+
+    @property
+    def magnitude(self) -> float:
+        """The bare number."""
+
+    @property
+    def units(self) -> object:
+        """The unit it stands in."""
+
+    def m_as(self, units: str) -> float:
+        """The bare number in another unit."""
+
+
+QuantityInput = str | float | PintQuantity
+
+
+@dataclass(frozen=True, slots=True)
+class Typed:
+    """A quantity as typed and as kept.
+
+    ``number`` and ``unit`` are what the user wrote, ``exact`` the decimal in the internal unit,
+    ``value`` the float the calculation uses [internal unit].
+    """
+
+    text: str
+    number: str
+    unit: str
+    exact: Decimal
+    value: float
+
+
+def echo(given: object) -> str:
+    """Return a short quoted form of what was given, for error messages."""
+    text = given if isinstance(given, str) else str(given)
+    cut = text if len(text) <= _LONGEST_ECHO else text[: _LONGEST_ECHO - 1] + "…"
+    return repr(cut)
+
+
+def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
+    """Read a quantity of the kind of ``unit``.
+
+    ``name`` is the input named in the error; a bare number is taken only where ``unit`` is "".
+    Raises :class:`UserError` that says what to type.
+
+    >>> read_quantity("span", "7.6 m", "mm").value
+    7600.0
+    >>> read_quantity("f_c", "32", "MPa")
+    Traceback (most recent call last):
+    lineproof.errors.UserError: f_c: '32' has no unit; write '32 MPa'
+    """
+    wanted = unit_named(unit)
+    if isinstance(given, bool) or given is None:
+        raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
+    if not isinstance(given, str | int | float | Decimal):
+        return _read_pint(name, given, wanted)
+    text = _plain(given) if not isinstance(given, str) else given.strip()
+    match = _TYPED.match(text)
+    if match is None or match[2].startswith(","):
+        raise UserError(f"{name}: {echo(given)} is not a number with a unit; {_hint(text, wanted)}")
+    number, unit_text = match[1], match[2].strip()
+    return _checked(name, text, number, _typed_unit(name, given, number, unit_text, wanted), wanted)
+
+
+def _plain(number: float) -> str:
+    if not math.isfinite(number):
+        return str(number)
+    return repr(number) if isinstance(number, float) else str(number)
+
+
+def _sample(wanted: Unit) -> str:
+    return repr(f"25 {example_unit(wanted)}".strip())
+
+
+def _hint(text: str, wanted: Unit) -> str:
+    if re.match(r"[+-]?\d+,\d", text):
+        point = text.replace(",", ".", 1)
+        return f"write a decimal point: {point[:_LONGEST_ECHO]!r}"
+    return f"write for example {_sample(wanted)}"
+
+
+def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: Unit) -> Unit:
+    if not unit_text:
+        if wanted.kind != "number":
+            suggestion = f"{number} {example_unit(wanted)}"
+            raise UserError(f"{name}: {echo(given)} has no unit; write {suggestion!r}")
+        return wanted
+    try:
+        unit = unit_named(unit_text)
+    except UserError as error:
+        raise UserError(f"{name}: {echo(given)}: {error.faults[0]}") from None
+    if unit.kind != wanted.kind:
+        if wanted.kind == "number":
+            raise UserError(f"{name}: {echo(given)} has a unit; write the bare number {number!r}")
+        raise UserError(
+            f"{name}: {echo(given)} is a {unit.kind}, but a {wanted.kind} is needed; "
+            f"write it in {', '.join(u for u in units_of_kind(wanted.kind)[:6])}"
+        )
+    return unit
+
+
+def _read_pint(name: str, given: object, wanted: Unit) -> Typed:
+    if not isinstance(given, PintQuantity):
+        raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
+    pint_name = wanted.expression.replace("in_l", "inch").replace("_t", "")
+    try:
+        number = float(given.m_as(pint_name))
+    except Exception:  # noqa: BLE001 - any registry, any of its errors
+        raise UserError(
+            f"{name}: {echo(given)} is not a {wanted.kind}; write it in {example_unit(wanted)}"
+        ) from None
+    text = _plain(float(f"{number:.12g}"))
+    if not math.isfinite(number):
+        raise UserError(f"{name}: {echo(given)} is not a finite number; write {_sample(wanted)}")
+    return _checked(name, f"{text} {wanted.spelling}".strip(), text, wanted, wanted)
+
+
+def _checked(name: str, text: str, number: str, unit: Unit, wanted: Unit) -> Typed:
+    exact = Decimal(number) * factor(unit.spelling, wanted.internal)
+    value = float(exact)
+    if not math.isfinite(value):
+        raise UserError(f"{name}: {echo(text)} is out of range; write a smaller number")
+    return Typed(text, number, unit.spelling, exact, value)

@@ -1,0 +1,206 @@
+"""The closed list of units, and the pint registry that stands behind it.
+
+pint alone would read ``kn`` as knots, does not know psf, and hangs on hostile text; so only the
+spellings below ever reach it.  Inside the package every value is a float in N, mm, MPa (and
+degrees, kg/m3, hours as such): the *internal unit* of its dimension.
+"""
+
+from __future__ import annotations
+
+import difflib
+from dataclasses import dataclass
+from decimal import Decimal
+from functools import cache
+from typing import TYPE_CHECKING, Any
+
+from lineproof.errors import UserError
+
+if TYPE_CHECKING:
+    import pint
+
+_DEFINITIONS = """\
+metre = [length] = m
+kilogram = [mass] = kg
+second = [time] = s
+degree = [angle] = deg
+minute = 60 * s = min_t
+hour = 3600 * s = h_t
+day = 86400 * s = d_t
+millimetre = 0.001 * m = mm
+centimetre = 0.01 * m = cm
+inch = 0.0254 * m = in_l
+foot = 0.3048 * m = ft
+newton = kg * m / s ** 2 = N
+kilonewton = 1000 * N = kN
+meganewton = 1000000 * N = MN
+pascal = N / m ** 2 = Pa
+kilopascal = 1000 * Pa = kPa
+megapascal = 1000000 * Pa = MPa
+gigapascal = 1000000000 * Pa = GPa
+pound = 0.45359237 * kg = lb
+pound_force = 4.4482216152605 * N = lbf
+kip = 4448.2216152605 * N
+radian = 57.295779513082320876798154814105 * deg = rad
+"""
+
+
+@dataclass(frozen=True, slots=True)
+class Unit:
+    """One unit of the closed list.
+
+    ``expression`` is what pint reads, ``kind`` the word for its dimension, ``internal`` the unit
+    in which values of that kind are kept.
+    """
+
+    spelling: str
+    expression: str
+    kind: str
+    internal: str
+
+
+_KINDS: dict[str, tuple[str, dict[str, str]]] = {
+    "number": ("", {"": "dimensionless"}),
+    "length": ("mm", {"mm": "mm", "cm": "cm", "m": "m", "in": "in_l", "ft": "ft"}),
+    "area": (
+        "mm2",
+        {"mm2": "mm**2", "cm2": "cm**2", "m2": "m**2", "in2": "in_l**2", "ft2": "ft**2"},
+    ),
+    "volume": ("mm3", {"mm3": "mm**3", "m3": "m**3", "in3": "in_l**3", "ft3": "ft**3"}),
+    "moment of inertia": ("mm4", {"mm4": "mm**4", "m4": "m**4", "in4": "in_l**4"}),
+    "force": ("N", {"N": "N", "kN": "kN", "MN": "MN", "lbf": "lbf", "kip": "kip"}),
+    "moment": (
+        "N.mm",
+        {
+            "N.mm": "N*mm",
+            "N.m": "N*m",
+            "kN.mm": "kN*mm",
+            "kN.m": "kN*m",
+            "MN.m": "MN*m",
+            "lbf.ft": "lbf*ft",
+            "kip.in": "kip*in_l",
+            "kip.ft": "kip*ft",
+        },
+    ),
+    "load per length": (
+        "N/mm",
+        {"N/mm": "N/mm", "N/m": "N/m", "kN/m": "kN/m", "plf": "lbf/ft", "klf": "kip/ft"},
+    ),
+    "stress or pressure": (
+        "MPa",
+        {
+            "MPa": "MPa",
+            "Pa": "Pa",
+            "kPa": "kPa",
+            "GPa": "GPa",
+            "psi": "lbf/in_l**2",
+            "ksi": "kip/in_l**2",
+            "psf": "lbf/ft**2",
+            "ksf": "kip/ft**2",
+        },
+    ),
+    "unit weight": ("N/mm3", {"N/mm3": "N/mm**3", "kN/m3": "kN/m**3", "pcf": "lbf/ft**3"}),
+    "density": ("kg/m3", {"kg/m3": "kg/m**3", "lb/ft3": "lb/ft**3"}),
+    "mass": ("kg", {"kg": "kg", "lb": "lb"}),
+    "mass per length": ("kg/m", {"kg/m": "kg/m", "lb/ft": "lb/ft"}),
+    "angle": ("deg", {"deg": "deg", "rad": "rad"}),
+    "time": ("h", {"h": "h_t", "min": "min_t", "d": "d_t"}),
+    "one over length": ("1/mm", {"1/mm": "1/mm", "1/m": "1/m"}),
+    "area per length": ("mm2/mm", {"mm2/mm": "mm**2/mm", "mm2/m": "mm**2/m"}),
+}
+
+UNITS: dict[str, Unit] = {
+    spelling: Unit(spelling, expression, kind, internal)
+    for kind, (internal, spellings) in _KINDS.items()
+    for spelling, expression in spellings.items()
+}
+
+_SAME_UNIT = {
+    "degrees": "deg", "degree": "deg", "°": "deg", "kN/m2": "kPa", "N/mm2": "MPa", "kNm": "kN.m",
+    "kip.ft.": "kip.ft", "kips": "kip", "hours": "h", "hour": "h", "days": "d", "-": "",
+}  # fmt: skip
+
+_EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "force": "kN"}
+
+METRE_SYSTEM = {
+    "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
+    "moment": "kN.m", "load per length": "kN/m", "stress or pressure": "kPa",
+    "unit weight": "kN/m3", "one over length": "1/m", "area per length": "mm2/mm",
+}  # fmt: skip
+"""Units in which a formula of loads is substituted: kN and m instead of N and mm."""
+
+
+def plain_spelling(text: str) -> str:
+    """Return the closed list's way to write a unit: ``kN·m`` becomes ``kN.m``."""
+    tidy = text.strip()
+    for given, plain in (("·", "."), ("*", "."), ("²", "2"), ("³", "3"), ("⁴", "4"), ("^", "")):
+        tidy = tidy.replace(given, plain)
+    return _SAME_UNIT.get(tidy, tidy)
+
+
+def unit_named(text: str) -> Unit:
+    """Return the unit of the closed list, or raise :class:`UserError` with the nearest names."""
+    spelling = plain_spelling(text) if len(text) <= 20 else text  # noqa: PLR2004 - longest is 7
+    found = UNITS.get(spelling)
+    if found is None:
+        near = _nearest(spelling)
+        hint = f"; write {near}" if near else ""
+        raise UserError(f"{text[:40]!r} is not a unit of the list{hint}")
+    return found
+
+
+def _nearest(spelling: str) -> str:
+    folded = {name.lower(): name for name in UNITS if name}
+    close = difflib.get_close_matches(spelling[:20].lower(), folded, n=3, cutoff=0.6)
+    return " or ".join(repr(folded[name]) for name in close)
+
+
+def units_of_kind(kind: str) -> tuple[str, ...]:
+    """Return the spellings that a value of this kind may be typed in."""
+    return tuple(_KINDS[kind][1])
+
+
+def example_unit(unit: Unit) -> str:
+    """Return the unit an error message suggests for values printed in ``unit``."""
+    return unit.spelling or _EXAMPLE.get(unit.kind, "")
+
+
+@cache
+def registry(number: type[Decimal] | type[float] = float) -> pint.UnitRegistry[Any]:
+    """Return the pint registry of the definitions above, keeping the author's order of units.
+
+    Conversions use the one with exact decimals; unit proofs and notebooks the one with floats,
+    since decimals know no roots.
+    """
+    import pint  # noqa: PLC0415 - 0.2 s, only needed at the border
+
+    ureg: pint.UnitRegistry[Any] = pint.UnitRegistry(None, non_int_type=number)
+    ureg.load_definitions(_DEFINITIONS.splitlines())
+    ureg.formatter.default_sort_func = None
+    return ureg
+
+
+@cache
+def factor(unit: str, into: str) -> Decimal:
+    """Return by what a number in ``unit`` is multiplied to stand in ``into`` (exact decimal)."""
+    ureg = registry(Decimal)
+    one = ureg.Quantity(Decimal(1), UNITS[unit].expression)
+    converted = one.to(UNITS[into].expression).magnitude
+    # Pint multiplies by way of base units; 28 digits leave noise such as 1.000...001.
+    return +Decimal(converted).quantize(Decimal(1).scaleb(_exponent(converted) - 20)).normalize()
+
+
+def _exponent(number: Decimal) -> int:
+    return number.adjusted()
+
+
+@cache
+def internal_factor(unit: str) -> float:
+    """Return the float that turns a number in ``unit`` into the internal unit of its kind."""
+    return float(factor(unit, UNITS[unit].internal))
+
+
+def system_unit(unit: str, system: str) -> str:
+    """Return the unit in which a value printed in ``unit`` is substituted in a unit system."""
+    kind = UNITS[unit].kind
+    internal = UNITS[unit].internal
+    return METRE_SYSTEM.get(kind, internal) if system == "kN-m" else internal

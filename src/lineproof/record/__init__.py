@@ -1,0 +1,18 @@
+"""Records: entries, digests, printed strings, reading, recomputing."""
+
+from lineproof.record.entry import Entry, Part, digest_of
+from lineproof.record.procedures import Procedure, procedure
+from lineproof.record.recompute import Difference, recompute
+from lineproof.record.record import MIME, Record
+
+__all__ = [
+    "MIME",
+    "Difference",
+    "Entry",
+    "Part",
+    "Procedure",
+    "Record",
+    "digest_of",
+    "procedure",
+    "recompute",
+]

@@ -1,0 +1,228 @@
+"""Live parts and entries into the plain data of a record."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from typing import Any
+
+from lineproof.formula import FROM_MEMORY, Notation, Symbol, symbol_from_id
+from lineproof.quantity.units import internal_factor
+from lineproof.record.entry import (
+    CHECK,
+    CRITERIA,
+    FIGURE,
+    FOUND,
+    GIVEN,
+    LINE,
+    LOOKUP,
+    NOTE,
+    TABLE,
+    VALUES,
+    Entry,
+    Part,
+    digest_of,
+)
+from lineproof.record.printing import Printer, utilisation
+
+SCHEMA = 1
+_UNNUMBERED = (FIGURE, NOTE, TABLE)
+
+
+def build(
+    parts: Iterable[Part],
+    *,
+    calc: Mapping[str, str],
+    member: str,
+    project: Mapping[str, Any],
+    codes: Mapping[str, str],
+    notation: Notation,
+    scope: str,
+    not_covered: Iterable[Mapping[str, str]],
+) -> dict[str, Any]:
+    """Return the record of a calculation as plain data, printed strings and digest included."""
+    builder = _Builder(notation)
+    made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
+    entries = [entry for part in made for entry in part["entries"]]
+    confirm = _to_confirm(entries, project)
+    return {
+        "schema": SCHEMA,
+        "calc": dict(calc),
+        "kind_of_member": member,
+        "project": dict(project),
+        "codes": dict(codes),
+        "notation": builder.notation(),
+        "parts": made,
+        "confirm": confirm,
+        "status": {
+            "scope": _scope(scope, confirm),
+            "not_covered": [dict(item) for item in not_covered],
+            "failed": [e["id"] for e in entries if e["kind"] == CHECK and not e["holds"]],
+        },
+        "digest": record_digest(calc["id"], codes, entries),
+    }
+
+
+def record_digest(
+    calc_id: str, codes: Mapping[str, str], entries: Iterable[Mapping[str, Any]]
+) -> str:
+    """Hash the calculation; title, signatures and dates stay outside, so signing keeps it."""
+    pieces = [f"{e['id']}:{e['digest']}" for e in entries]
+    return digest_of(calc_id, codes.get("pair", ""), *pieces)
+
+
+def _scope(scope: str, confirm: list[dict[str, Any]]) -> str:
+    if scope:
+        return scope
+    if any(not row["confirmed"] for row in confirm):
+        return "preliminary: values from memory not yet confirmed"
+    return ""
+
+
+class _Builder:
+    def __init__(self, notation: Notation) -> None:
+        self._known = notation
+        self._used: dict[str, Symbol] = {}
+        self._printer = Printer()
+
+    def notation(self) -> list[dict[str, str]]:
+        fields = ("id", "base", "sub", "sup", "meaning", "unit")
+        used = sorted(self._used.values(), key=lambda s: (s.id.lower(), s.id))
+        return [{f: getattr(symbol, f) for f in fields} for symbol in used]
+
+    def part(self, part: Part, label: str) -> dict[str, Any]:
+        rows: list[dict[str, Any]] = []
+        number = 0
+        for entry in part.entries.values():
+            numbered = entry.kind not in _UNNUMBERED
+            number += numbered
+            rows.append(self._entry(entry, f"{label}.{number}" if numbered else ""))
+        return {"key": part.key, "label": label, "title": part.title, "entries": rows}
+
+    def _entry(self, entry: Entry, label: str) -> dict[str, Any]:
+        source, extra = entry.source, entry.extra or {}
+        common = {
+            "id": entry.id,
+            "kind": entry.kind,
+            "symbol": entry.symbol,
+            "label": label,
+            "title": extra.get("title") or source.title,
+            "clause": source.clause,
+            "basis": source.basis,
+            "digest": entry.digest,
+        }
+        if entry.kind in VALUES:
+            self._note_symbol(entry)
+            value = entry.value / internal_factor(entry.unit)
+            return common | {"value": value, "unit": entry.unit} | self._value(entry)
+        if entry.kind in CRITERIA:
+            return common | self._criterion(entry)
+        rests = {"args": {a.symbol: a.id for a in entry.args}} if entry.args else {}
+        return common | rests | dict(source.content)
+
+    def _value(self, entry: Entry) -> dict[str, Any]:
+        source = entry.source
+        printed = {"printed": self._printer.printed(entry)}
+        if entry.kind == GIVEN:
+            return {"typed": source.typed.text, "source": source.origin} | printed
+        if entry.kind == LOOKUP:
+            return {"table": source.table, "row": source.row, "source": source.origin} | printed
+        if entry.kind == FOUND:
+            return self._found(entry) | printed
+        return {
+            "formula": source.text,
+            "args": _arguments(source.names, entry.args),
+            "numbers": dict(source.numbers),
+            "system": source.system,
+        } | printed
+
+    def _found(self, entry: Entry) -> dict[str, Any]:
+        source = entry.source
+        made = source.procedure
+        closing_args: tuple[Entry, ...] = entry.extra["closing_args"]  # type: ignore[index]
+        sides: tuple[float, float] = entry.extra["closing_sides"]  # type: ignore[index]
+        test = source.closing
+        holds = test.holds(*sides)
+        return {
+            "procedure": {"name": made.name, "version": made.version, "title": made.title},
+            "settings": dict(source.settings),
+            "args": _arguments(made.names, entry.args),
+            "closing": {
+                "formula": test.text,
+                "args": _arguments(test.names, closing_args),
+                "holds": holds,
+                "left": sides[0] / internal_factor(test.unit),
+                "right": sides[1] / internal_factor(test.unit),
+                "unit": test.unit,
+                "printed": self._printer.comparison(test, closing_args, sides, holds),
+            },
+        }
+
+    def _criterion(self, entry: Entry) -> dict[str, Any]:
+        test, extra = entry.source, entry.extra or {}
+        holds = bool(entry)
+        ratio = utilisation(entry) if entry.kind == CHECK else None
+        row: dict[str, Any] = {
+            "formula": test.text,
+            "args": _arguments(test.names, entry.args),
+            "numbers": dict(test.numbers),
+            "system": test.system,
+            "holds": holds,
+            "left": entry.value[0] / internal_factor(test.unit),
+            "right": entry.value[1] / internal_factor(test.unit),
+            "unit": test.unit,
+            "printed": self._printer.criterion(entry, ratio),
+            "conclusion": test.yes if holds else test.no,
+        }
+        if entry.kind == CHECK:
+            row["utilisation"] = ratio
+            if not holds and extra.get("exception"):
+                row["exception"] = extra["exception"]
+        return row
+
+    def _note_symbol(self, entry: Entry) -> None:
+        symbol = self._known.get(entry.symbol) or _symbol_of(entry) or symbol_from_id(entry.symbol)
+        if not symbol.meaning or not symbol.unit:
+            symbol = Symbol(
+                symbol.id, symbol.base, symbol.sub, symbol.sup,
+                symbol.meaning or entry.source.title, symbol.unit or entry.unit,
+            )  # fmt: skip
+        self._used.setdefault(entry.symbol, symbol)
+        if entry.kind == LINE:
+            for name, arg in zip(entry.source.names, entry.args, strict=True):
+                if name != arg.symbol:
+                    self._used.setdefault(name, self._known.get(name) or symbol_from_id(name))
+
+
+def _symbol_of(entry: Entry) -> Symbol | None:
+    symbol = entry.source.symbol
+    return symbol if isinstance(symbol, Symbol) else None
+
+
+def _arguments(names: Iterable[str], args: Iterable[Entry]) -> dict[str, str]:
+    return {name: arg.id for name, arg in zip(names, args, strict=True)}
+
+
+def _to_confirm(
+    entries: Iterable[Mapping[str, Any]], project: Mapping[str, Any]
+) -> list[dict[str, Any]]:
+    confirmed = {
+        str(row.get("clause")): f"{row.get('by', '')}, {row.get('on', '')}"
+        for row in project.get("confirmed", ())
+        if isinstance(row, Mapping)
+    }
+    rows: dict[tuple[str, str], dict[str, Any]] = {}
+    for entry in entries:
+        if FROM_MEMORY in str(entry["basis"]):
+            key = (entry["clause"], entry["title"])
+            row = rows.setdefault(
+                key,
+                {
+                    "clause": entry["clause"],
+                    "what": entry["title"],
+                    "basis": entry["basis"],
+                    "confirmed": confirmed.get(entry["clause"], ""),
+                    "lines": [],
+                },
+            )
+            row["lines"].append(entry["id"])
+    return list(rows.values())

@@ -1,0 +1,48 @@
+"""Formulas and criteria that a designer writes as text in the notebook."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Mapping
+
+from lineproof.errors import UserError
+from lineproof.formula import (
+    Criterion,
+    Formula,
+    Name,
+    Notation,
+    System,
+    criterion,
+    formula,
+    parse_line,
+)
+from lineproof.quantity import unit_named
+from lineproof.record import Entry
+
+Units = Callable[[Iterable[str], Mapping[str, Entry]], dict[str, str]]
+
+
+def own_formula(
+    text: str, unit: str | None, title: str, system: System, notation: Notation
+) -> Formula:
+    """Read a designer's formula; the unit comes from the call or from the notation."""
+    symbol, _ = parse_line(text)
+    if unit is None and symbol not in notation:
+        raise UserError(
+            f"{symbol}: say in which unit it is printed: unit='kN.m' (unit='' for a number)"
+        )
+    if unit is not None:
+        unit = unit_named(unit).spelling
+    return formula(text, unit=unit, title=title, system=system, notation=notation)
+
+
+def own_criterion(
+    text: str, unit: str | None, title: str, notation: Notation, units: Units
+) -> Criterion:
+    """Read a designer's criterion; both sides are printed in the unit of a bare side."""
+    made = criterion(text, unit=unit, title=title, notation=notation)
+    if unit is None:
+        bare = [side.id for side in (made.left, made.right) if isinstance(side, Name)]
+        known = units(made.names, {})
+        printed = known[bare[0]] if bare else ""
+        made = criterion(text, unit=printed, title=title, notation=notation)
+    return made

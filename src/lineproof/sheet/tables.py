@@ -1,0 +1,41 @@
+"""Tables of published values, looked up by row."""
+
+from __future__ import annotations
+
+import difflib
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from lineproof.errors import UserError
+from lineproof.quantity import echo
+
+
+@dataclass(frozen=True)
+class LookupTable:
+    """A table: rows by key, each with a number (as text) per column.
+
+    ``columns`` gives the unit of each column; ``word`` what a row is called in an error.
+    """
+
+    name: str
+    word: str
+    columns: Mapping[str, str]
+    rows: Mapping[str, Mapping[str, str]]
+    source: str
+    clause: str = ""
+    basis: str = ""
+
+    def row(self, key: object, what: str) -> Mapping[str, str]:
+        """Return a row; raises :class:`UserError` that names input ``what`` and the rows there are."""
+        found = self.rows.get(key) if isinstance(key, str) else None
+        if found is None:
+            near = difflib.get_close_matches(str(key)[:20], self.rows, n=1)
+            hint = f"; did you mean {near[0]!r}? There are" if near else "; write one of"
+            raise UserError(
+                f"{what}: {echo(key)} is not a {self.word}{hint} {', '.join(self.rows)}"
+            )
+        return found
+
+    def number(self, key: str, column: str) -> float:
+        """Return one number of the table, in the column's unit."""
+        return float(self.rows[key][column])

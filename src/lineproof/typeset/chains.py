@@ -1,0 +1,105 @@
+"""Chains of equal (or compared) things: formula, substitution, coherent result."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from functools import lru_cache
+from typing import Any
+
+from lineproof.formula.grammar import parse_criterion, parse_line
+from lineproof.formula.notation import Notation
+from lineproof.formula.tree import Name, Tree, names_of
+from lineproof.typeset.nodes import EQUALS, OPPOSITE, RELATIONS, Math, Sign, row
+from lineproof.typeset.plain import plain
+from lineproof.typeset.values import number_math, symbol_math, symbol_of, value_math
+from lineproof.typeset.visitor import formula_math, substitution_math
+
+Entry = Mapping[str, Any]
+
+
+@dataclass(frozen=True, slots=True)
+class Chain:
+    """A left side and the pieces that follow it, each beginning with its relation sign.
+
+    ``lead`` is a word before the chain ("asked").
+    """
+
+    head: Math
+    pieces: tuple[Math, ...]
+    lead: str = ""
+
+    @property
+    def plain(self) -> str:
+        """Return the chain as one line of plain text."""
+        chain = plain(row([self.head, *self.pieces]))
+        return f"{self.lead}: {chain}" if self.lead else chain
+
+
+@lru_cache(maxsize=4096)
+def _line_tree(formula: str) -> Tree:
+    return parse_line(formula)[1]
+
+
+@lru_cache(maxsize=4096)
+def _criterion_trees(formula: str) -> tuple[Tree, str, Tree]:
+    return parse_criterion(formula)
+
+
+def line_chain(entry: Entry, notation: Notation) -> Chain:
+    """Return symbol = formula = substitution (= coherent result); the result stands apart."""
+    tree, printed = _line_tree(entry["formula"]), entry["printed"]
+    symbol = symbol_math(symbol_of(entry["symbol"], notation))
+    pieces = [row([EQUALS, formula_math(tree, notation)])]
+    coherent = printed.get("coherent")
+    if names_of(tree):
+        numbers = substitution_math(tree, printed["args"], notation)
+        # A substitution that is the result itself ("M = M_f") would only be printed twice.
+        if coherent or numbers != number_math(printed["result"]):
+            pieces.append(row([EQUALS, numbers]))
+    if coherent:
+        pieces.append(row([EQUALS, value_math(coherent["result"], coherent["unit"])]))
+    return Chain(symbol, tuple(pieces))
+
+
+def criterion_chains(entry: Entry, notation: Notation) -> tuple[Chain, ...]:
+    """Return a criterion as chains that are true as printed.
+
+    Two plain names give one chain, a = 26.1 mm ≤ h_f = 140 mm. Otherwise three: the criterion,
+    the substitution, both values. When the criterion does not hold, the values stand with the
+    opposite sign, and the criterion stands first as what was asked for.
+    """
+    left, sign, right = _criterion_trees(entry["formula"])
+    asked = RELATIONS[sign]
+    true = asked if entry["holds"] else RELATIONS[OPPOSITE[sign]]
+    both_names = isinstance(left, Name) and isinstance(right, Name)
+    chains = []
+    if not (both_names and entry["holds"]):
+        sides = formula_math(left, notation), formula_math(right, notation)
+        lead = "" if entry["holds"] else "asked"
+        chains.append(Chain(sides[0], (row([asked, sides[1]]),), lead))
+    if both_names:
+        return (*chains, _named_values(entry, left, true, right, notation))
+    numbers = [
+        substitution_math(side, entry["printed"]["args"], notation) for side in (left, right)
+    ]
+    values = _values(entry)
+    if numbers != [number_math(entry["printed"][side]) for side in ("left", "right")]:
+        chains.append(_compared(numbers[0], true, numbers[1]))
+    return (*chains, _compared(values[0], true, values[1]))
+
+
+def _compared(left: Math, sign: Sign, right: Math) -> Chain:
+    return Chain(left, (row([sign, right]),))
+
+
+def _values(entry: Entry) -> tuple[Math, Math]:
+    printed = entry["printed"]
+    unit = printed.get("unit", "")
+    return value_math(printed["left"], unit), value_math(printed["right"], unit)
+
+
+def _named_values(entry: Entry, left: Tree, sign: Sign, right: Tree, notation: Notation) -> Chain:
+    first, second = _values(entry)
+    names = formula_math(left, notation), formula_math(right, notation)
+    return Chain(names[0], (row([EQUALS, first]), row([sign, names[1]]), row([EQUALS, second])))

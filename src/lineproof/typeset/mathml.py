@@ -1,0 +1,99 @@
+"""Nodes to MathML Core."""
+
+from __future__ import annotations
+
+from html import escape
+
+from lineproof.typeset.glyphs import printable
+from lineproof.typeset.nodes import (
+    Digits,
+    Fence,
+    Fraction,
+    Letter,
+    Math,
+    Prime,
+    Root,
+    Row,
+    Scripts,
+    Sign,
+    Thin,
+    Unit,
+    Word,
+)
+from lineproof.typeset.values import grouped, unit_text
+
+_THIN = '<mspace width="0.1667em"></mspace>'
+_COMMA_SPACE = '<mo separator="true">,</mo>'
+
+
+def mathml(math: Math, *, display: bool = False) -> str:
+    """Return a complete ``<math>`` element (its text escaped, safe inside HTML)."""
+    mode = ' display="block"' if display else ""
+    # displaystyle keeps fractions legible on paper while the element stays in the line.
+    return f'<math{mode} displaystyle="true">{_write(math)}</math>'
+
+
+def _text(text: str) -> str:
+    return escape(printable(text))
+
+
+def _write(math: Math) -> str:
+    match math:
+        case Row(items):
+            return f"<mrow>{''.join(map(_write, items))}</mrow>"
+        case Fraction(top, bottom):
+            return f"<mfrac>{_write(top)}{_write(bottom)}</mfrac>"
+        case Root(of, ""):
+            return f"<msqrt>{_write(of)}</msqrt>"
+        case Root(of, index):
+            return f"<mroot>{_write(of)}<mn>{_text(index)}</mn></mroot>"
+        case Scripts(base, sub, sup):
+            return _scripts(base, sub, sup)
+        case Fence(of, left, right):
+            return (
+                f'<mrow><mo stretchy="true" form="prefix">{_text(left)}</mo>{_write(of)}'
+                f'<mo stretchy="true" form="postfix">{_text(right)}</mo></mrow>'
+            )
+    return _write_token(math)
+
+
+def _write_token(math: Math) -> str:
+    match math:
+        case Letter(text):
+            return f"<mi>{_text(text)}</mi>"
+        case Word(text):
+            edges = text.strip(" ") != text
+            kept = _text(text.replace(" ", "\u00a0")) if edges else _text(text)
+            return f"<mtext>{kept}</mtext>"
+        case Digits(text):
+            return f"<mn>{_text(grouped(text))}</mn>"
+        case Sign(text, role):
+            return _sign(text, role)
+        case Thin():
+            return _THIN
+        case Unit("deg"):
+            return "<mtext>°</mtext>"
+        case Unit(text):
+            return f"{_THIN}<mtext>{_text(unit_text(text))}</mtext>"
+        case Prime():
+            return "<mo>′</mo>"
+    msg = f"{math!r} is no node"
+    raise TypeError(msg)
+
+
+def _sign(text: str, role: str) -> str:
+    if role == "prefix":
+        return f'<mo form="prefix">{_text(text)}</mo>'
+    if text == ",":
+        return _COMMA_SPACE
+    if text == "/":
+        return '<mo lspace="0" rspace="0">/</mo>'
+    return f"<mo>{_text(text)}</mo>"
+
+
+def _scripts(base: Math, sub: Math | None, sup: Math | None) -> str:
+    if sub is not None and sup is not None:
+        return f"<msubsup>{_write(base)}{_write(sub)}{_write(sup)}</msubsup>"
+    if sub is not None:
+        return f"<msub>{_write(base)}{_write(sub)}</msub>"
+    return f"<msup>{_write(base)}{_write(sup or Row(()))}</msup>"

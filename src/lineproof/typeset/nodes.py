@@ -1,0 +1,136 @@
+"""The marks on paper: one neutral description of typeset mathematics.
+
+The visitor makes these nodes once; TeX, MathML, the Typst tree and plain text are written from
+them, so no two outputs can disagree about a bracket.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from typing import Literal
+
+Role = Literal["binary", "relation", "prefix", "comma"]
+
+
+@dataclass(frozen=True, slots=True)
+class Letter:
+    """A single italic letter, the base of a symbol."""
+
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Word:
+    """Upright text: a subscript, the name of a function, a value in words."""
+
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Digits:
+    """An unsigned plain number as the record holds it (``12500.5``)."""
+
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Sign:
+    """An operator or relation sign, as the character that is printed."""
+
+    text: str
+    role: Role
+
+
+@dataclass(frozen=True, slots=True)
+class Thin:
+    """The thin space that stands for multiplication."""
+
+
+@dataclass(frozen=True, slots=True)
+class Unit:
+    """A unit in the closed list's ASCII spelling (``kN.m``), after its number."""
+
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Prime:
+    """The prime of f'c."""
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """Nodes side by side; a row never holds a row."""
+
+    items: tuple[Math, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Fraction:
+    """Numerator over denominator."""
+
+    top: Math
+    bottom: Math
+
+
+@dataclass(frozen=True, slots=True)
+class Root:
+    """A square root, or with ``index`` "3" a cube root."""
+
+    of: Math
+    index: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Scripts:
+    """A base with a subscript, a superscript or both."""
+
+    base: Math
+    sub: Math | None = None
+    sup: Math | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Fence:
+    """An expression between brackets or bars that grow with it."""
+
+    of: Math
+    left: str = "("
+    right: str = ")"
+
+
+Math = Letter | Word | Digits | Sign | Thin | Unit | Prime | Row | Fraction | Root | Scripts | Fence
+
+MINUS = "−"
+TIMES = "×"
+PLUS = Sign("+", "binary")
+SUBTRACT = Sign(MINUS, "binary")
+MULTIPLY = Sign(TIMES, "binary")
+NEGATE = Sign(MINUS, "prefix")
+EQUALS = Sign("=", "relation")
+COMMA = Sign(",", "comma")
+RELATIONS = {
+    "<=": Sign("≤", "relation"),
+    ">=": Sign("≥", "relation"),
+    "<": Sign("<", "relation"),
+    ">": Sign(">", "relation"),
+}
+OPPOSITE = {"<=": ">", ">=": "<", "<": ">=", ">": "<="}
+"""The relation that holds when the one named does not."""
+
+
+def row(items: Iterable[Math]) -> Math:
+    """Join nodes side by side; rows inside are opened, one node stays itself."""
+    flat: list[Math] = []
+    for item in items:
+        if isinstance(item, Row):
+            flat.extend(item.items)
+        else:
+            flat.append(item)
+    return flat[0] if len(flat) == 1 else Row(tuple(flat))
+
+
+def items_of(math: Math) -> tuple[Math, ...]:
+    """Return the nodes of a row, or the node itself as the only one."""
+    return math.items if isinstance(math, Row) else (math,)

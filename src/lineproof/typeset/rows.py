@@ -1,0 +1,261 @@
+"""One entry of a record as a row of the package: worded once for HTML, PDF and the notebook.
+
+A row holds nodes and plain texts only; how they are laid out is the business of its reader.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from typing import Any
+
+from lineproof.formula.notation import Notation, Symbol
+from lineproof.quantity.units import UNITS
+from lineproof.typeset.chains import Chain, criterion_chains, line_chain
+from lineproof.typeset.nodes import EQUALS, Math, Word, row
+from lineproof.typeset.plain import plain
+from lineproof.typeset.values import (
+    empirical_note,
+    is_number,
+    number_text,
+    symbol_math,
+    symbol_of,
+    unit_text,
+    value_math,
+    value_text,
+)
+
+Entry = Mapping[str, Any]
+
+HOLDS, FAILS, ACCEPTED = "holds", "does not hold", "accepted, does not hold"
+
+
+@dataclass(frozen=True, slots=True)
+class Origin:
+    """Where an argument comes from: the entry's id, its printed label, its symbol."""
+
+    id: str
+    label: str
+    symbol: Math
+
+
+@dataclass(frozen=True, slots=True)
+class PrintedTable:
+    """A table: headings as nodes or text, cells as printed text, which columns hold numbers."""
+
+    columns: tuple[Math, ...]
+    rows: tuple[tuple[str, ...], ...]
+    numeric: tuple[bool, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class PrintedRow:
+    """One entry, ready to be laid out.
+
+    ``chains`` hold the working, ``result`` the last piece ("M_r = 551 kN·m"), ``verdict`` the
+    word for a check or decision, ``ratio`` its printed utilisation, ``remarks`` short sentences
+    in small print (source, basis, empirical numbers as text).
+    """
+
+    id: str
+    kind: str
+    label: str
+    title: str
+    clause: str
+    chains: tuple[Chain, ...] = ()
+    result: Math | None = None
+    verdict: str = ""
+    ratio: str = ""
+    conclusion: str = ""
+    remarks: tuple[str, ...] = ()
+    origins: tuple[Origin, ...] = ()
+    text: str = ""
+    table: PrintedTable | None = None
+    figure: Mapping[str, Any] | None = field(default=None, hash=False)
+    caption: str = ""
+    alt: str = ""
+
+    @property
+    def holds(self) -> bool:
+        """Tell whether this row is no failed check."""
+        return self.verdict not in (FAILS, ACCEPTED)
+
+    @property
+    def plain(self) -> str:
+        """Return the row in plain text, one line per chain."""
+        lines = [chain.plain for chain in self.chains]
+        if self.result is not None:
+            lines.append(plain(self.result))
+        lines += [part for part in (self.verdict, self.conclusion, self.text) if part]
+        return "\n".join([self.title, *lines]) if self.title else "\n".join(lines)
+
+
+def notation_of(record: Mapping[str, Any]) -> Notation:
+    """Return the notation that a record carries."""
+    keys = ("id", "base", "sub", "sup", "meaning", "unit")
+    return Notation(
+        Symbol(**{key: str(symbol.get(key, "")) for key in keys}) for symbol in record["notation"]
+    )
+
+
+def printed_row(
+    entry: Entry, notation: Notation, labels: Mapping[str, str] | None = None
+) -> PrintedRow:
+    """Return an entry of a record as a row; ``labels`` give the printed label of each entry id."""
+    makers: dict[str, Callable[[Entry, Notation], dict[str, Any]]] = {
+        "given": _given,
+        "lookup": _lookup,
+        "line": _line,
+        "decision": _decision,
+        "check": _check,
+        "found": _found,
+        "figure": _figure,
+        "note": _note,
+        "table": _table,
+    }
+    own = makers[entry["kind"]](entry, notation)
+    remarks = [*own.pop("remarks", ()), *_basis(entry)]
+    return PrintedRow(
+        id=entry["id"],
+        kind=entry["kind"],
+        label=entry.get("label", ""),
+        title=entry.get("title", ""),
+        clause=entry.get("clause", ""),
+        remarks=tuple(remarks),
+        origins=_origins(entry.get("args", {}), notation, labels or {}),
+        **own,
+    )
+
+
+def _origins(
+    args: Mapping[str, str], notation: Notation, labels: Mapping[str, str]
+) -> tuple[Origin, ...]:
+    return tuple(
+        Origin(source, labels.get(source, ""), symbol_math(symbol_of(name, notation)))
+        for name, source in args.items()
+        if source in labels
+    )
+
+
+def _basis(entry: Entry) -> list[str]:
+    basis = entry.get("basis", "")
+    return [f"Basis: {basis}."] if basis else []
+
+
+def _equation(entry: Entry, notation: Notation) -> Math:
+    printed = entry["printed"]
+    symbol = symbol_math(symbol_of(entry["symbol"], notation))
+    return row([symbol, EQUALS, value_math(printed["result"], printed["unit"])])
+
+
+def _given(entry: Entry, notation: Notation) -> dict[str, Any]:
+    printed = entry["printed"]
+    remarks = []
+    if printed.get("typed"):
+        typed = value_text(printed["typed"], printed["typed_unit"])
+        remarks.append(f"Typed as {typed}.")
+    if entry.get("source"):
+        remarks.append(f"Source: {entry['source']}.")
+    return {"result": _equation(entry, notation), "remarks": remarks}
+
+
+def _lookup(entry: Entry, notation: Notation) -> dict[str, Any]:
+    remarks = [f"From {entry['table']}, row {entry['row']}."]
+    if entry.get("source"):
+        remarks.append(f"Source: {entry['source']}.")
+    return {"result": _equation(entry, notation), "remarks": remarks}
+
+
+def _line(entry: Entry, notation: Notation) -> dict[str, Any]:
+    note = empirical_note(entry.get("numbers") or {})
+    remarks = [f"Numbers of the formula: {note}."] if note else []
+    return {
+        "chains": (line_chain(entry, notation),),
+        "result": _equation(entry, notation),
+        "remarks": remarks,
+    }
+
+
+def _decision(entry: Entry, notation: Notation) -> dict[str, Any]:
+    return {
+        "chains": criterion_chains(entry, notation),
+        "verdict": "yes" if entry["holds"] else "no",
+        "conclusion": entry.get("conclusion", ""),
+    }
+
+
+def _check(entry: Entry, notation: Notation) -> dict[str, Any]:
+    exception = entry.get("exception")
+    remarks = []
+    if exception and not entry["holds"]:
+        remarks.append(
+            f"Exception accepted by {exception['initials']}: {exception['reason'].rstrip('.')}."
+        )
+    verdict = HOLDS if entry["holds"] else ACCEPTED if exception else FAILS
+    ratio = entry["printed"].get("utilisation") or ""
+    return {
+        "chains": criterion_chains(entry, notation),
+        "verdict": verdict,
+        "ratio": number_text(ratio),
+        "conclusion": entry.get("conclusion", ""),
+        "remarks": remarks,
+    }
+
+
+def _found(entry: Entry, notation: Notation) -> dict[str, Any]:
+    procedure, printed = entry["procedure"], entry["printed"]
+    closing = entry.get("closing")
+    title = procedure.get("title") or procedure["name"]
+    texts = [f"Found by {title} ({procedure['name']}, version {procedure['version']})."]
+    chains = list(_given_values(printed.get("args", {}), notation))
+    if closing:
+        chains += criterion_chains(closing, notation)
+    return {
+        "chains": tuple(chains),
+        "result": _equation(entry, notation),
+        "text": texts[0],
+        "conclusion": "The closing criterion above confirms the value by hand." * bool(closing),
+    }
+
+
+def _given_values(args: Mapping[str, str], notation: Notation) -> tuple[Chain, ...]:
+    """Show what a procedure was given, each argument as symbol = value."""
+    chains = []
+    for name, text in args.items():
+        symbol = symbol_of(name, notation)
+        # Arguments are printed in the internal unit of their kind, as in any substitution.
+        known = UNITS.get(symbol.unit)
+        value = value_math(text, known.internal if known else "")
+        chains.append(Chain(symbol_math(symbol), (row([EQUALS, value]),)))
+    return tuple(chains)
+
+
+def _figure(entry: Entry, _: Notation) -> dict[str, Any]:
+    return {
+        "figure": entry["figure"],
+        "caption": entry.get("caption", ""),
+        "alt": entry.get("alt", ""),
+    }
+
+
+def _note(entry: Entry, _: Notation) -> dict[str, Any]:
+    return {"text": entry["text"]}
+
+
+def _table(entry: Entry, notation: Notation) -> dict[str, Any]:
+    columns = tuple(heading_math(column, notation) for column in entry["columns"])
+    rows = tuple(tuple(number_text(cell) for cell in line) for line in entry["rows"])
+    numeric = tuple(
+        all(is_number(line[place]) for line in entry["rows"] if line[place])
+        for place in range(len(columns))
+    )
+    return {"table": PrintedTable(columns, rows, numeric)}
+
+
+def heading_math(text: str, notation: Notation) -> Math:
+    """Typeset a column heading: "M_r, kN.m" becomes symbol and unit, other text stays text."""
+    head, comma, unit = (part.strip() for part in text.partition(","))
+    if head not in notation:
+        return Word(text)
+    symbol = symbol_math(notation[head])
+    return row([symbol, Word(", " + unit_text(unit))]) if comma and unit else symbol

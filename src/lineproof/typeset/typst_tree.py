@@ -1,0 +1,69 @@
+"""Nodes to the maths tree of the Typst template: nested lists of texts, never source text.
+
+Each list begins with the node's key; ``templates/maths.typ`` builds the mark from it.
+"""
+
+from __future__ import annotations
+
+from lineproof.typeset.glyphs import printable
+from lineproof.typeset.nodes import (
+    Digits,
+    Fence,
+    Fraction,
+    Letter,
+    Math,
+    Prime,
+    Root,
+    Row,
+    Scripts,
+    Sign,
+    Thin,
+    Unit,
+    Word,
+)
+from lineproof.typeset.values import grouped, unit_text
+
+TypstTree = list["str | TypstTree | None"]
+
+
+def typst_tree(math: Math) -> TypstTree:
+    """Return the node as nested lists, ready for JSON."""
+    match math:
+        case Row(items):
+            return ["row", *map(typst_tree, items)]
+        case Fraction(top, bottom):
+            return ["frac", typst_tree(top), typst_tree(bottom)]
+        case Root(of, index):
+            return ["root", index, typst_tree(of)]
+        case Scripts(base, sub, sup):
+            return [
+                "scripts",
+                typst_tree(base),
+                None if sub is None else typst_tree(sub),
+                None if sup is None else typst_tree(sup),
+            ]
+        case Fence(of, left, right):
+            return ["fence", left, typst_tree(of), right]
+    return _token(math)
+
+
+def _token(math: Math) -> TypstTree:
+    match math:
+        case Letter(text):
+            return ["letter", printable(text)]
+        case Word(text):
+            return ["word", printable(text)]
+        case Digits(text):
+            return ["word", grouped(text)]
+        case Sign(text, role):
+            return [role, text]
+        case Thin():
+            return ["thin"]
+        case Unit("deg"):
+            return ["word", "°"]
+        case Unit(text):
+            return ["unit", printable(unit_text(text))]
+        case Prime():
+            return ["prime"]
+    msg = f"{math!r} is no node"
+    raise TypeError(msg)
