@@ -1,1 +1,37 @@
 """A calculation package in which every line can be proved."""
+
+from __future__ import annotations
+
+import sys
+from importlib import import_module
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from lineproof import beams
+    from lineproof.sheet import Sheet
+
+__all__ = ["Sheet", "beams"]
+
+
+def __getattr__(name: str) -> Any:
+    """Import what a notebook asks for on first use, so that commands start at once."""
+    if name == "Sheet":
+        from lineproof.sheet import Sheet  # noqa: PLC0415
+
+        return Sheet
+    if name == "beams":
+        return import_module("lineproof.beams")
+    msg = f"module 'lineproof' has no attribute {name!r}"
+    raise AttributeError(msg)
+
+
+def _show_in_notebook() -> None:
+    """Show parts under their cells when this runs inside IPython or a notebook."""
+    ipython = sys.modules.get("IPython")
+    if ipython is not None and ipython.get_ipython() is not None:
+        from lineproof.notebook.display import register  # noqa: PLC0415
+
+        register()
+
+
+_show_in_notebook()

@@ -120,31 +120,45 @@ def _chosen(
     width = text_width(runs, TEXT_SIZE)
     lines = [axes.at(0.0, value)[1] for value in levels]
     path = [axes.at(*point) for point in points]
-    for dx, dy in _PLACES:
-        left, middle = (x + dx, y + dy) if dx > 0 else (x + dx - width, y + dy)
-        box = (left - 1.0, middle - 2.0, left + width + 1.0, middle + 2.0)
-        if _free(box, axes, lines, path):
-            break
-    near = (left - 0.6 if dx > 0 else left + width + 0.6, middle)
-    return [Line((x, y), near, "text", THIN), Text((left, middle), runs, "text", anchor="start")]
+    fields = [_field(x, y, width, dx, dy) for dx, dy in _PLACES]
+    inside = [field for field in fields if _inside(field, axes)]
+    free = [field for field in inside if _free(field, lines, path)]
+    left, low, right, high = (free or inside or fields)[0]
+    middle = (low + high) / 2
+    near = (left + 0.4 if left > x else right - 0.4, middle)
+    at = ((left + right) / 2, middle)
+    return [Line((x, y), near, "text", THIN), Text(at, runs, "text")]
 
 
+_Field = tuple[float, float, float, float]
 _PLACES = tuple(
-    (side * dx, dy) for dx in (4.0, 9.0, 16.0) for dy in (-4.0, -8.0, -12.0, 4.0, -18.0, 9.0)
+    (side * dx, dy)
+    for dx in (4.0, 9.0, 16.0, 26.0)
+    for dy in (-4.0, -8.0, -12.0, 4.0, 9.0, -18.0, 14.0, -24.0, 20.0)
     for side in (1.0, -1.0)
-)  # fmt: skip
+)
 
 
-def _free(
-    box: tuple[float, float, float, float],
-    axes: Axes,
-    lines: Sequence[float],
-    path: Sequence[Point],
-) -> bool:
-    left, low, right, high = box
-    if left < axes.left + 1.0 or right > axes.left + axes.width or low < axes.bottom:
-        return False
-    if high > axes.bottom + axes.height or any(low <= y <= high for y in lines):
+def _field(x: float, y: float, width: float, dx: float, dy: float) -> _Field:
+    """Left, bottom, right, top of a label that starts or ends ``dx`` from a point, mm."""
+    left = x + dx if dx > 0 else x + dx - width
+    return (left - 1.0, y + dy - 2.0, left + width + 1.0, y + dy + 2.0)
+
+
+def _inside(field: _Field, axes: Axes) -> bool:
+    left, low, right, high = field
+    return (
+        axes.left + 1.0 <= left
+        and right <= axes.left + axes.width
+        and axes.bottom <= low
+        and high <= axes.bottom + axes.height
+    )
+
+
+def _free(field: _Field, lines: Sequence[float], path: Sequence[Point]) -> bool:
+    """Tell whether a label crosses neither the levels nor the curve."""
+    left, low, right, high = field
+    if any(low <= y <= high for y in lines):
         return False
     steps = 40
     for number in range(steps + 1):

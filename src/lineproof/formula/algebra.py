@@ -48,12 +48,24 @@ def expression(tree: Tree) -> Expr:
             return _function(function, [expression(a) for a in args])
 
 
+_LONGEST_POWER = 4096
+"""Bits of an exact power of constants; 9**9**9 would fill the memory."""
+
+
+def _power(base: Expr, exponent: Expr) -> Expr:
+    if base.is_Rational and exponent.is_Rational:
+        bits = max(abs(base.p), base.q).bit_length()
+        if bits * abs(exponent) > _LONGEST_POWER:
+            raise UserError(f"a power of constants with more than {_LONGEST_POWER} bits")
+    return base**exponent
+
+
 _BINARY: dict[str, Callable[[Any, Any], Any]] = {
     "+": lambda a, b: a + b,
     "-": lambda a, b: a - b,
     "*": lambda a, b: a * b,
     "/": lambda a, b: a / b,
-    "**": lambda a, b: a**b,
+    "**": _power,
 }
 
 
@@ -103,7 +115,13 @@ def same(first: Tree, second: Tree) -> bool:
 
 
 def solve_for(
-    formula: Formula, name: str, result: float, values: Mapping[str, float], low: float, high: float
+    formula: Formula,
+    name: str,
+    result: float,
+    values: Mapping[str, float],
+    *,
+    low: float,
+    high: float,
 ) -> float:
     """Return the value of ``name`` in [low, high] at which the formula gives ``result``.
 

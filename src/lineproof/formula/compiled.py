@@ -41,8 +41,9 @@ def _cot(angle: float) -> float:
     return 1.0 / math.tan(math.radians(angle))
 
 
+# fabs, since abs of a complex number would hide the root of a negative one.
 _FUNCTIONS: dict[str, object] = {
-    "sqrt": math.sqrt, "cbrt": math.cbrt, "abs": abs, "min": min, "max": max,
+    "sqrt": math.sqrt, "cbrt": math.cbrt, "abs": math.fabs, "min": min, "max": max,
     "sin": _sin, "cos": _cos, "tan": _tan, "cot": _cot,
 }  # fmt: skip
 

@@ -31,6 +31,7 @@ _OPERATORS: dict[type[ast.operator], str] = {
 }
 _NUMBER = re.compile(r"\d{1,12}(\.\d{1,12})?([eE][+-]?\d{1,2})?\Z|\.\d{1,12}\Z")
 _COMPARISON = re.compile(r"<=|>=|<|>")
+_FOREIGN = re.compile(r"[^A-Za-z0-9_+\-*/()., ]")
 
 
 class FormulaError(UserError):
@@ -52,6 +53,9 @@ def parse_expression(text: str) -> Tree:
         raise _refuse(text, f"longer than {LONGEST} characters; split it into two lines")
     if not text.isascii():
         raise _refuse(text, "use ASCII names such as 'phi_s', 'f_c' (Greek is typeset for you)")
+    foreign = _FOREIGN.search(text)
+    if foreign is not None:
+        raise _refuse(text, f"{foreign[0]!r} is not plain arithmetic")
     try:
         body = ast.parse(text.strip(), mode="eval").body
         return _convert(body, text, 0)

@@ -123,7 +123,7 @@ class _Push:
                 return float(text)
             case Negative(of):
                 return -self._exponent(of)
-            case Binary("/", Number(above), Number(below)):
+            case Binary("/", Number(above), Number(below)) if float(below):
                 return float(above) / float(below)
         raise UnitProofError(f"formula {self.text!r}: an exponent must be a plain number")
 

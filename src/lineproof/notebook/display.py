@@ -15,9 +15,9 @@ from typing import Any
 from lineproof.drawing import from_json, svg
 from lineproof.record import digest_of
 from lineproof.sheet import PartView, Sheet
-from lineproof.typeset import number_text, plain, printable, tex
+from lineproof.typeset import plain, printable, tex
 from lineproof.typeset.chains import Chain
-from lineproof.typeset.measure import broken
+from lineproof.typeset.measure import broken, width
 from lineproof.typeset.nodes import Math, Word, row
 from lineproof.typeset.rows import PrintedRow, PrintedTable, notation_of, printed_row
 
@@ -121,7 +121,7 @@ def _plain(part: Mapping[str, Any], rows: list[PrintedRow]) -> str:
 def _plain_table(table: PrintedTable | None) -> list[str]:
     if table is None:
         return []
-    lines = [[_heading_text(column) for column in table.columns], *map(list, table.rows)]
+    lines = [[plain(column) for column in table.columns], *map(list, table.rows)]
     widths = [max(len(line[place]) for line in lines) for place in range(len(table.columns))]
     return [
         "  ".join(
@@ -130,10 +130,6 @@ def _plain_table(table: PrintedTable | None) -> list[str]:
         ).rstrip()
         for line in lines
     ]
-
-
-def _heading_text(column: Math) -> str:
-    return plain(column)
 
 
 # -- HTML with TeX ---------------------------------------------------------------------------
@@ -182,10 +178,11 @@ def _result(printed: PrintedRow) -> list[str]:
 
 
 def _chain(chain: Chain) -> list[str]:
-    first, *rest = chain.pieces or (Word(""),)
-    lines = [*broken(row([chain.head, first]), _WIDEST)]
-    for piece in rest:
-        lines += broken(piece, _WIDEST)
+    whole = row([chain.head, *chain.pieces])
+    lines: list[Math] = [whole]
+    if width(whole) > _WIDEST:
+        first, *rest = chain.pieces
+        lines = [part for m in (row([chain.head, first]), *rest) for part in broken(m, _WIDEST)]
     shown = [_tex(line) for line in lines]
     if chain.lead:
         shown[0] = f"{_span(chain.lead + ':')} {shown[0]}"
@@ -232,5 +229,13 @@ def _heading(column: Math) -> str:
     return _span(column.text) if isinstance(column, Word) else _tex(column)
 
 
-__all__ = ["ANCHOR", "METADATA", "bundle", "cell_hash", "number_text", "part_bundle", "part_digest",
-           "register", "show"]  # fmt: skip
+__all__ = [
+    "ANCHOR",
+    "METADATA",
+    "bundle",
+    "cell_hash",
+    "part_bundle",
+    "part_digest",
+    "register",
+    "show",
+]

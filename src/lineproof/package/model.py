@@ -30,6 +30,8 @@ from lineproof.typeset.values import symbol_math, symbol_of, value_math
 Walk = Iterable[tuple[str, str]]
 """Blocks of a calc in order: ``("prose", markdown)`` and ``("part", key)``."""
 
+_PART_LEVEL, _DEEPEST_LEVEL = 2, 4
+
 CAUTIONS = (
     "This package is not valid until it has been reviewed and sealed by the licensed engineer "
     "responsible for the work.",
@@ -87,6 +89,14 @@ class Calc:
     scope: str
     not_covered: tuple[NotCovered, ...]
     marks: Mapping[str, tuple[str, ...]]
+
+    @property
+    def in_front(self) -> frozenset[str]:
+        """Ids of the figures that stand before the working and are not repeated in it."""
+        shown = [figure.id for figure in self.loading]
+        # The section is drawn on the summary page, which exists only where checks do.
+        shown += [self.section.id] if self.section is not None and self.summary else []
+        return frozenset(shown)
 
 
 @dataclass(frozen=True, slots=True)
@@ -209,12 +219,22 @@ class _Builder:
         self._check_anchors([key for kind, key in steps if kind == "part"], parts)
         blocks: list[PartBlock | ProseBlock] = []
         values = self._values()
+        level = _PART_LEVEL - 1
         for kind, content in steps:
             if kind == "part" and content in parts:
                 blocks.append(self._part(parts[content]))
+                level = _PART_LEVEL
             elif kind == "prose":
-                self._add_prose(content, values, blocks)
+                prose, level = _levelled(self._prose(content, values), level)
+                blocks += [ProseBlock(prose)] if prose.blocks else []
         return tuple(blocks)
+
+    def _prose(self, markdown: str, values: Mapping[str, Math]) -> Prose:
+        try:
+            return read_prose(markdown, values)
+        except UserError as error:
+            self.faults.take(error)
+            return Prose(())
 
     def _check_anchors(self, anchors: list[str], parts: Mapping[str, Any]) -> None:
         calc = self.record["calc"]["id"]
@@ -230,17 +250,6 @@ class _Builder:
                 self.faults.add(
                     f"{calc}: part {key!r} is in the record but not shown; run the calc again"
                 )
-
-    def _add_prose(
-        self, markdown: str, values: Mapping[str, Math], blocks: list[PartBlock | ProseBlock]
-    ) -> None:
-        try:
-            prose = read_prose(markdown, values)
-        except UserError as error:
-            self.faults.take(error)
-            return
-        if prose.blocks:
-            blocks.append(ProseBlock(_levelled(prose, under_part=bool(blocks))))
 
     def _values(self) -> dict[str, Math]:
         """Give symbol = value for every full id and for every symbol that stands once."""
@@ -265,17 +274,16 @@ class _Builder:
         )
 
 
-def _levelled(prose: Prose, *, under_part: bool) -> Prose:
-    """Fit prose headings under the package's own, without leaving a level out."""
-    level = 3 if under_part else 2
+def _levelled(prose: Prose, level: int) -> tuple[Prose, int]:
+    """Fit prose headings under the package's own, leaving no level out; return the last level."""
     blocks: list[Mark] = []
     for mark in prose.blocks:
         if mark.kind == "heading":
-            level = min(max(mark.level, 3), level + 1, 4)
+            level = min(max(mark.level, _PART_LEVEL), level + 1, _DEEPEST_LEVEL)
             blocks.append(Mark("heading", children=mark.children, level=level))
         else:
             blocks.append(mark)
-    return Prose(tuple(blocks))
+    return Prose(tuple(blocks)), level
 
 
 def _json(record: Mapping[str, Any]) -> str:

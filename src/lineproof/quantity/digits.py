@@ -12,19 +12,24 @@ from decimal import ROUND_HALF_EVEN, Context, Decimal
 
 START_DIGITS = 3
 MOST_DIGITS = 6
+ALL_DIGITS = 17
+"""Digits that tell any two floats apart."""
+MOST_DECIMALS = 4
 _PLAIN_FROM, _PLAIN_BELOW = -4, 6
-_EXACT = Context(prec=40, rounding=ROUND_HALF_EVEN)
+_EXACT = Context(prec=400, rounding=ROUND_HALF_EVEN)
 
 
 def significant(value: float | Decimal, digits: int) -> Decimal:
-    """Return ``value`` rounded to ``digits`` significant digits."""
+    """Return ``value`` rounded to ``digits`` significant digits, or to ``-digits`` decimals."""
+    if digits <= 0:
+        return Decimal(value).quantize(Decimal(1).scaleb(digits), context=_EXACT)
     return Context(prec=digits, rounding=ROUND_HALF_EVEN).plus(Decimal(value))
 
 
 def number_text(number: Decimal) -> str:
     """Return the printed text of a rounded decimal; powers of ten go by threes.
 
-    >>> number_text(Decimal("551000000")), number_text(Decimal("0.140")), number_text(Decimal(0))
+    >>> number_text(Decimal("551e6")), number_text(Decimal("0.140")), number_text(Decimal(0))
     ('551e6', '0.140', '0')
     """
     if not number:
@@ -39,10 +44,17 @@ def number_text(number: Decimal) -> str:
 def rounded_text(value: float | Decimal, digits: int) -> str:
     """Return ``value`` printed to ``digits`` significant digits.
 
+    With ``digits`` of zero or less, to ``-digits`` decimals: ``0.00`` for what is nothing but the
+    rounding of larger numbers.
+
     >>> rounded_text(5e9, 3), rounded_text(0.00085, 3), rounded_text(2.5, 3)
     ('5.00e9', '0.000850', '2.50')
+    >>> rounded_text(0.0004, -2), rounded_text(0.0, 3)
+    ('0.00', '0')
     """
     number = significant(value, digits)
+    if digits <= 0:
+        return f"{number or abs(number):f}"
     if number and number.adjusted() + 1 < digits:
         number = number.quantize(Decimal(1).scaleb(number.adjusted() - digits + 1), context=_EXACT)
     return number_text(number)
@@ -66,7 +78,9 @@ def digits_in(text: str) -> int:
 
 
 def last_unit(value: float, digits: int) -> float:
-    """Return one unit of the last of ``digits`` significant digits of ``value``."""
+    """Return one unit of the last of ``digits`` significant digits (or decimals) of ``value``."""
+    if digits <= 0:
+        return 10.0**digits
     return 10.0 ** (math.floor(math.log10(abs(value))) - digits + 1) if value else 0.0
 
 
@@ -81,32 +95,39 @@ class Argument:
 
 @dataclass(frozen=True, slots=True)
 class Chosen:
-    """Significant digits per argument and for the result."""
+    """Significant digits per argument and for the result (zero or less: decimals, negated)."""
 
     args: tuple[int, ...]
     result: int
 
 
 def choose_digits(
-    function: Callable[..., float], args: Sequence[Argument], result: float, unit: str
+    function: Callable[..., float],
+    args: Sequence[Argument],
+    result: float,
+    unit: str,
+    needed: int = 0,
 ) -> Chosen:
     """Choose the fewest digits so that the printed arguments give the printed result.
 
     Each number starts short. While the function of the printed arguments misses the printed
     result by more than one unit of its last digit, the argument whose rounding moves the result
-    most gains a digit, to six at most; only when none is left does the result give one up.
+    most gains a digit, to six at most; only when none is left does the result give one up. A
+    result that is nothing but the difference of roundings prints as 0.00; only where even that
+    misses, or where the result must show ``needed`` digits, do arguments go beyond six.
     """
+    first = max(start_digits(result, unit), needed)
+    fewer = [first] if needed else [*range(first, 0, -1), *range(-MOST_DECIMALS, 1)]
     digits = [a.digits for a in args]
-    result_digits = start_digits(result, unit)
-    while not _agrees(function, _printed(args, digits), result, result_digits):
-        longest = _most_moving(function, args, digits, result)
-        if longest is not None:
+    for limit, result_digits in [*((MOST_DIGITS, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
+        while not _agrees(function, _printed(args, digits), result, result_digits):
+            longest = _most_moving(function, args, digits, result, limit)
+            if longest is None:
+                break
             digits[longest] += 1
-        elif result_digits > 1:
-            result_digits -= 1
         else:
-            break
-    return Chosen(tuple(digits), result_digits)
+            return Chosen(tuple(digits), result_digits)
+    return Chosen(tuple(digits), needed or 1)
 
 
 def _printed(args: Sequence[Argument], digits: Sequence[int]) -> list[float]:
@@ -127,19 +148,23 @@ def _agrees(
 def _call(function: Callable[..., float], args: Sequence[float]) -> float:
     try:
         value = function(*args)
-    except (ArithmeticError, ValueError):
+    except (ArithmeticError, ValueError, TypeError):  # TypeError: a root of a negative compared
         return math.inf
-    return value if isinstance(value, float) else math.inf
+    return value if isinstance(value, float) and not math.isnan(value) else math.inf
 
 
 def _most_moving(
-    function: Callable[..., float], args: Sequence[Argument], digits: Sequence[int], result: float
+    function: Callable[..., float],
+    args: Sequence[Argument],
+    digits: Sequence[int],
+    result: float,
+    limit: int,
 ) -> int | None:
     exact = [a.value for a in args]
     moves = []
     for i, (argument, n) in enumerate(zip(args, digits, strict=True)):
-        if argument.exact is None and n < MOST_DIGITS:
-            alone = [*exact[:i], float(significant(argument.value, n)), *exact[i + 1 :]]
+        rounded = float(significant(argument.value, n))
+        if argument.exact is None and n < limit and rounded != argument.value:
+            alone = [*exact[:i], rounded, *exact[i + 1 :]]
             moves.append((abs(_call(function, alone) - result), -i))
-    best = max(moves, default=(0.0, 0))
-    return -best[1] if best[0] > 0 else None
+    return -max(moves)[1] if moves else None

@@ -17,9 +17,11 @@ from lineproof.quantity.units import (
     units_of_kind,
 )
 
-_NUMBER = r"[+-]?(?:\d{1,15}(?:\.\d{0,15})?|\.\d{1,15})(?:[eE][+-]?\d{1,2})?"
-_TYPED = re.compile(rf"\s*({_NUMBER})(.*)\Z", re.DOTALL)
+# ASCII digits only; the number ends where no digit and no point follows.
+_NUMBER = r"[+-]?(?:[0-9]{1,20}(?:\.[0-9]{0,20})?|\.[0-9]{1,20})(?:[eE][+-]?[0-9]{1,2})?"
+_TYPED = re.compile(rf"({_NUMBER})(?![0-9.])(.*)\Z", re.DOTALL)
 _LONGEST_ECHO = 60
+_PINT_NAMES = {"in_l": "inch", "h_t": "hour", "min_t": "minute", "d_t": "day"}
 
 
 @runtime_checkable
@@ -35,7 +37,7 @@ class PintQuantity(Protocol):
         """The unit it stands in."""
 
     def m_as(self, units: str) -> float:
-        """The bare number in another unit."""
+        """Return the bare number in another unit."""
 
 
 QuantityInput = str | float | PintQuantity
@@ -45,8 +47,9 @@ QuantityInput = str | float | PintQuantity
 class Typed:
     """A quantity as typed and as kept.
 
-    ``number`` and ``unit`` are what the user wrote, ``exact`` the decimal in the internal unit,
-    ``value`` the float the calculation uses [internal unit].
+    ``text`` is what the user wrote, ``number`` (as a printed number: ``0.5`` for ``.5``) and
+    ``unit`` its pieces, ``exact`` the decimal in the internal unit, ``value`` the float the
+    calculation uses [internal unit].
     """
 
     text: str
@@ -58,6 +61,8 @@ class Typed:
 
 def echo(given: object) -> str:
     """Return a short quoted form of what was given, for error messages."""
+    if isinstance(given, int) and not -(10**_LONGEST_ECHO) < given < 10**_LONGEST_ECHO:
+        return "a number of more than 60 digits"  # Python itself refuses to print the longest
     text = given if isinstance(given, str) else str(given)
     cut = text if len(text) <= _LONGEST_ECHO else text[: _LONGEST_ECHO - 1] + "…"
     return repr(cut)
@@ -80,7 +85,7 @@ def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
         raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
     if not isinstance(given, str | int | float | Decimal):
         return _read_pint(name, given, wanted)
-    text = _plain(given) if not isinstance(given, str) else given.strip()
+    text = " ".join(given.split()) if isinstance(given, str) else _plain(given)
     match = _TYPED.match(text)
     if match is None or match[2].startswith(","):
         raise UserError(f"{name}: {echo(given)} is not a number with a unit; {_hint(text, wanted)}")
@@ -88,10 +93,24 @@ def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
     return _checked(name, text, number, _typed_unit(name, given, number, unit_text, wanted), wanted)
 
 
-def _plain(number: float) -> str:
-    if not math.isfinite(number):
-        return str(number)
-    return repr(number) if isinstance(number, float) else str(number)
+def _plain(number: float | Decimal) -> str:
+    if isinstance(number, int):
+        return str(number) if abs(number) < 10**_LONGEST_ECHO else ""
+    # A float of another library may show itself as "float64(0.5)".
+    return repr(float(number)) if isinstance(number, float) else str(number)
+
+
+def _as_printed(number: str) -> str:
+    """Return a typed number as a printed number: every digit kept, one way to write it.
+
+    >>> _as_printed("+.50"), _as_printed("5.E+06"), _as_printed("-007")
+    ('0.50', '5e6', '-7')
+    """
+    mantissa, _, power = number.lower().partition("e")
+    whole, _, decimals = mantissa.lstrip("+-").partition(".")
+    plain = (whole.lstrip("0") or "0") + (f".{decimals}" if decimals else "")
+    sign = "-" if number.startswith("-") and plain.strip("0.") else ""
+    return sign + plain + (f"e{int(power)}" if power and int(power) else "")
 
 
 def _sample(wanted: Unit) -> str:
@@ -128,7 +147,10 @@ def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: U
 def _read_pint(name: str, given: object, wanted: Unit) -> Typed:
     if not isinstance(given, PintQuantity):
         raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
-    pint_name = wanted.expression.replace("in_l", "inch").replace("_t", "")
+    # Full names stand in every registry, ours and pint's own.
+    pint_name = wanted.expression
+    for ours, full in _PINT_NAMES.items():
+        pint_name = pint_name.replace(ours, full)
     try:
         number = float(given.m_as(pint_name))
     except Exception:  # noqa: BLE001 - any registry, any of its errors
@@ -146,4 +168,4 @@ def _checked(name: str, text: str, number: str, unit: Unit, wanted: Unit) -> Typ
     value = float(exact)
     if not math.isfinite(value):
         raise UserError(f"{name}: {echo(text)} is out of range; write a smaller number")
-    return Typed(text, number, unit.spelling, exact, value)
+    return Typed(text, _as_printed(number), unit.spelling, exact, value)

@@ -165,7 +165,7 @@ def example_unit(unit: Unit) -> str:
 
 
 @cache
-def registry(number: type[Decimal] | type[float] = float) -> pint.UnitRegistry[Any]:
+def registry(number: type[Decimal | float] = float) -> pint.UnitRegistry[Any]:
     """Return the pint registry of the definitions above, keeping the author's order of units.
 
     Conversions use the one with exact decimals; unit proofs and notebooks the one with floats,

@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from typing import Any
 
+from lineproof.errors import UserError
 from lineproof.formula import FROM_MEMORY, Notation, Symbol, symbol_from_id
-from lineproof.quantity.units import internal_factor
+from lineproof.quantity.units import UNITS, internal_factor
 from lineproof.record.entry import (
     CHECK,
     CRITERIA,
@@ -100,6 +101,7 @@ class _Builder:
 
     def _entry(self, entry: Entry, label: str) -> dict[str, Any]:
         source, extra = entry.source, entry.extra or {}
+        _check_kinds(entry)
         common = {
             "id": entry.id,
             "kind": entry.kind,
@@ -116,7 +118,7 @@ class _Builder:
             return common | {"value": value, "unit": entry.unit} | self._value(entry)
         if entry.kind in CRITERIA:
             return common | self._criterion(entry)
-        rests = {"args": {a.symbol: a.id for a in entry.args}} if entry.args else {}
+        rests = {"args": _shown_arguments(entry.args)} if entry.args else {}
         return common | rests | dict(source.content)
 
     def _value(self, entry: Entry) -> dict[str, Any]:
@@ -153,7 +155,9 @@ class _Builder:
                 "left": sides[0] / internal_factor(test.unit),
                 "right": sides[1] / internal_factor(test.unit),
                 "unit": test.unit,
-                "printed": self._printer.comparison(test, closing_args, sides, holds),
+                "printed": self._printer.comparison(
+                    test, closing_args, sides, holds=holds
+                ),
             },
         }
 
@@ -193,9 +197,35 @@ class _Builder:
                     self._used.setdefault(name, self._known.get(name) or symbol_from_id(name))
 
 
+def _check_kinds(entry: Entry) -> None:
+    """Refuse an argument of another kind than the formula's own notation gives its name.
+
+    The units of a formula are proved once, with its notation; a length passed as a force would
+    compute without a word.
+    """
+    known = getattr(entry.source, "notation", None)
+    if not known:
+        return
+    for name, arg in zip(entry.source.names, entry.args, strict=True):
+        symbol = known.get(name)
+        wanted = UNITS[symbol.unit].kind if symbol is not None else UNITS[arg.unit].kind
+        if UNITS[arg.unit].kind != wanted:
+            raise UserError(
+                f"{entry.id}: {name} is a {wanted}, but {arg.id} is a {UNITS[arg.unit].kind}"
+            )
+
+
 def _symbol_of(entry: Entry) -> Symbol | None:
     symbol = entry.source.symbol
     return symbol if isinstance(symbol, Symbol) else None
+
+
+def _shown_arguments(args: Iterable[Entry]) -> dict[str, str]:
+    """Name what a figure rests on by symbol; where two share it, the later ones by id."""
+    named: dict[str, str] = {}
+    for arg in args:
+        named[arg.id if arg.symbol in named else arg.symbol] = arg.id
+    return named
 
 
 def _arguments(names: Iterable[str], args: Iterable[Entry]) -> dict[str, str]:

@@ -44,7 +44,7 @@ class Entry:
 
     __slots__ = ("args", "digest_", "extra", "kind", "part", "source", "symbol", "value")
 
-    def __init__(
+    def __init__(  # noqa: PLR0917 - the hot path: keywords cost time
         self,
         part: Part,
         symbol: str,

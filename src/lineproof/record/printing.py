@@ -2,16 +2,20 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
+from dataclasses import replace
 from decimal import Decimal
 from typing import Any
 
 from lineproof.formula import Criterion, Formula, Name, System, Tree
-from lineproof.formula.compiled import compile_tree
+from lineproof.formula.compiled import COMPARE, compile_tree
 from lineproof.quantity.digits import (
+    ALL_DIGITS,
     MOST_DIGITS,
     START_DIGITS,
     Argument,
+    Chosen,
     choose_digits,
     digits_in,
     number_text,
@@ -26,20 +30,21 @@ _NOT_METRIC = frozenset(
     {"in", "ft", "in2", "ft2", "in3", "ft3", "in4", "lbf", "kip", "lbf.ft", "kip.in", "kip.ft",
      "plf", "klf", "psi", "ksi", "psf", "ksf", "pcf", "lb/ft3", "lb", "lb/ft", "min"}
 )  # fmt: skip
-_LONGEST_COMPARISON = 15
+_LONGEST_TYPED = 15
 
 
 def exact_decimal(entry: Entry) -> Decimal | None:
-    """Return the exact decimal of a typed or looked-up value [internal unit], if it is short."""
-    if entry.kind == GIVEN:
-        exact = entry.source.typed.exact
-    elif entry.kind == LOOKUP:
-        unit = entry.source.unit
-        exact = Decimal(entry.source.number) * factor(unit, UNITS[unit].internal)
-    else:
+    """Return the exact decimal of a typed or looked-up value [internal unit].
+
+    None for a computed value, and for one converted from a US unit into too many digits.
+    """
+    if entry.kind not in (GIVEN, LOOKUP):
         return None
+    typed = entry.source.typed
+    exact: Decimal = typed.exact
+    longest = MOST_DIGITS if typed.unit in _NOT_METRIC else _LONGEST_TYPED
     short = exact.normalize()
-    return short if len(short.as_tuple().digits) <= MOST_DIGITS else None
+    return short if len(short.as_tuple().digits) <= longest else None
 
 
 def in_unit(value: float, unit: str, digits: int) -> str:
@@ -57,61 +62,73 @@ class Printer:
         """Return the printed strings of a given, lookup, line or found value."""
         if entry.kind == GIVEN:
             made = _given(entry)
+            self._digits[id(entry)] = digits_in(made["result"])
         elif entry.kind == LOOKUP:
-            made = {"result": entry.source.number, "unit": entry.source.unit}
+            made = {"result": entry.source.typed.number, "unit": entry.source.unit}
         elif entry.kind == FOUND:
             made = self._found(entry)
         else:
             made = self._line(entry)
-        self._digits[id(entry)] = digits_in(made["result"])
         return made
 
     def criterion(self, entry: Entry, utilisation: float | None) -> dict[str, Any]:
         """Return the printed strings of a decision or a check."""
-        made = self.comparison(entry.source, entry.args, entry.value, bool(entry))
+        made = self.comparison(entry.source, entry.args, entry.value, holds=bool(entry))
         if utilisation is not None:
             made["utilisation"] = _ratio(utilisation, holds=bool(entry))
         return made
 
     def comparison(
-        self, test: Criterion, args: Sequence[Entry], sides: tuple[float, float], holds: bool
+        self, test: Criterion, args: Sequence[Entry], sides: tuple[float, float], *, holds: bool
     ) -> dict[str, Any]:
-        """Return both sides printed so that the printed comparison has the recorded truth."""
+        """Return both sides printed so that the printed comparison has the recorded truth.
+
+        The same goes for the substitution: both formulas of the printed arguments.
+        """
         arguments = [self._argument(a) for a in args]
-        shown: dict[str, int] = {}
-        digits = []
-        for tree, value in zip((test.left, test.right), sides, strict=True):
-            chosen = self._side(tree, test.names, args, arguments, value, test.unit)
-            digits.append(chosen[0])
-            for name, n in chosen[1].items():
-                shown[name] = max(n, shown.get(name, 0))
-        left, right = _truthful(test, sides, digits, holds=holds)
+        trees = (test.left, test.right)
+        chosen = [
+            self._side(tree, test, args, arguments, value)
+            for tree, value in zip(trees, sides, strict=True)
+        ]
+        needed = _truthful(test, sides, [c.result for c in chosen], holds=holds)
+        chosen = [
+            c if n == c.result else self._side(tree, test, args, arguments, value, needed=n)
+            for tree, value, c, n in zip(trees, sides, chosen, needed, strict=True)
+        ]
+        shown = [max(pair) for pair in zip(*(c.args for c in chosen), strict=True)]
+        shown = _true_substitution(test, arguments, shown, holds=holds)
+        left, right = (in_unit(v, test.unit, n) for v, n in zip(sides, needed, strict=True))
         texts = {
-            name: _argument_text(arg, argument, shown.get(name, argument.digits), test.system)
-            for name, arg, argument in zip(test.names, args, arguments, strict=True)
+            name: _argument_text(arg, argument, n, test.system)
+            for name, arg, argument, n in zip(test.names, args, arguments, shown, strict=True)
         }
         return {"args": texts, "left": left, "right": right, "unit": test.unit}
 
-    def _side(
+    def _side(  # noqa: PLR0917 - one side of a comparison with all it rests on
         self,
         tree: Tree,
-        names: tuple[str, ...],
+        test: Criterion,
         args: Sequence[Entry],
         arguments: Sequence[Argument],
         value: float,
-        unit: str,
-    ) -> tuple[int, dict[str, int]]:
+        *,
+        needed: int = 0,
+    ) -> Chosen:
         if isinstance(tree, Name):
-            entry = args[names.index(tree.id)]
-            own = self._digits.get(id(entry), START_DIGITS)
-            exact = exact_decimal(entry)
-            return (len(exact.as_tuple().digits) if exact else own), {}
-        scale = internal_factor(unit)
-        compiled = compile_tree(tree, names)
-        chosen = choose_digits(
-            lambda *numbers: compiled(*numbers) / scale, arguments, value / scale, unit
-        )
-        return chosen.result, dict(zip(names, chosen.args, strict=True))
+            at = test.names.index(tree.id)
+            exact = exact_decimal(args[at])
+            own = self._digits.get(id(args[at]), START_DIGITS)
+            digits = needed or (len(exact.as_tuple().digits) if exact is not None else own)
+            shown = [a.digits for a in arguments]
+            shown[at] = max(shown[at], digits)
+            return Chosen(tuple(shown), digits)
+        scale = internal_factor(test.unit)
+        compiled = compile_tree(tree, test.names)
+        return choose_digits(
+            lambda *numbers: compiled(*numbers) / scale,
+            arguments, value / scale, test.unit, max(needed, 0),
+        )  # fmt: skip
 
     def _argument(self, entry: Entry) -> Argument:
         exact = exact_decimal(entry)
@@ -123,27 +140,33 @@ class Printer:
 
     def _line(self, entry: Entry) -> dict[str, Any]:
         made: Formula = entry.source
-        unit = entry.unit
-        scale = internal_factor(unit)
+        unit, target = entry.unit, system_unit(entry.unit, made.system)
         arguments = [self._argument(a) for a in entry.args]
-        chosen = choose_digits(
-            lambda *numbers: made.function(*numbers) / scale, arguments, entry.value / scale, unit
-        )
+        chosen = _choose(made, arguments, entry.value, unit)
+        coherent = chosen.result
+        if not _by_powers_of_ten(unit, target):
+            # The result in two unlike units: both must follow from the printed arguments.
+            arguments = _longer(arguments, chosen)
+            between = _choose(made, arguments, entry.value, target)
+            chosen = _choose(made, _longer(arguments, between), entry.value, unit)
+            coherent = between.result
         texts = {
             name: _argument_text(arg, argument, digits, made.system)
             for name, arg, argument, digits in zip(
                 made.names, entry.args, arguments, chosen.args, strict=True
             )
         }
+        self._digits[id(entry)] = chosen.result
         return {
             "args": texts,
             "result": in_unit(entry.value, unit, chosen.result),
             "unit": unit,
-            "coherent": _coherent(entry.value, unit, made.system, chosen.result),
+            "coherent": _coherent(entry.value, unit, target, coherent),
         }
 
     def _found(self, entry: Entry) -> dict[str, Any]:
         digits = max(4, start_digits(entry.value, entry.unit))
+        self._digits[id(entry)] = digits
         texts = {
             name: _argument_text(arg, argument, argument.digits, "N-mm")
             for name, arg in zip(entry.source.procedure.names, entry.args, strict=True)
@@ -156,11 +179,25 @@ class Printer:
         }
 
 
+def _choose(made: Formula, arguments: Sequence[Argument], value: float, unit: str) -> Chosen:
+    scale = internal_factor(unit)
+    return choose_digits(
+        lambda *numbers: made.function(*numbers) / scale, arguments, value / scale, unit
+    )
+
+
+def _longer(arguments: Sequence[Argument], chosen: Chosen) -> list[Argument]:
+    return [replace(a, digits=n) for a, n in zip(arguments, chosen.args, strict=True)]
+
+
+def _by_powers_of_ten(unit: str, target: str) -> bool:
+    return factor(unit, target).normalize().as_tuple().digits == (1,)
+
+
 def _given(entry: Entry) -> dict[str, Any]:
     typed = entry.source.typed
     if typed.unit not in _NOT_METRIC:
-        number = typed.number.lstrip("+")
-        return {"result": "0" + number if number.startswith(".") else number, "unit": typed.unit}
+        return {"result": typed.number, "unit": typed.unit}
     digits = START_DIGITS
     exact = exact_decimal(entry)
     if exact is not None:
@@ -184,34 +221,61 @@ def _argument_text(entry: Entry, argument: Argument, digits: int, system: System
     return rounded_text(rounded, digits)
 
 
-def _coherent(value: float, unit: str, system: System, digits: int) -> dict[str, str] | None:
-    target = system_unit(unit, system)
-    if target == unit or factor(unit, target) == 1:
+def _coherent(value: float, unit: str, target: str, digits: int) -> dict[str, str] | None:
+    if target == unit or factor(unit, target) == 1 or digits <= 0:
         return None
     return {"result": in_unit(value, target, digits), "unit": target}
 
 
 def _truthful(
     test: Criterion, sides: tuple[float, float], digits: list[int], *, holds: bool
-) -> tuple[str, str]:
+) -> list[int]:
+    """Return the digits of both sides at which the printed comparison has its recorded truth.
+
+    Rounded to the same digits, two numbers keep their order, so the shorter side grows first.
+    """
     while True:
         left, right = (in_unit(value, test.unit, n) for value, n in zip(sides, digits, strict=True))
-        if test.holds(float(left), float(right)) == holds or min(digits) >= _LONGEST_COMPARISON:
-            return left, right
+        if COMPARE[test.sign](float(left), float(right)) == holds or min(digits) >= ALL_DIGITS:
+            return digits
+        fewest = max(min(digits), 0)
+        digits = [max(n, fewest + 1) for n in digits]
+
+
+def _true_substitution(
+    test: Criterion, arguments: Sequence[Argument], digits: list[int], *, holds: bool
+) -> list[int]:
+    """Lengthen arguments until both sides, computed from them, compare as recorded."""
+    while max(digits, default=ALL_DIGITS) < ALL_DIGITS:
+        numbers = [
+            a.exact if a.exact is not None else float(significant(a.value, n))
+            for a, n in zip(arguments, digits, strict=True)
+        ]
+        try:
+            left, right = (side(*numbers) for side in test.functions)
+            if COMPARE[test.sign](left, right) == holds:
+                break
+        except (ArithmeticError, ValueError, TypeError):
+            pass
         digits = [n + 1 for n in digits]
+    return digits
 
 
 def _ratio(utilisation: float, *, holds: bool) -> str:
-    for digits in range(START_DIGITS, _LONGEST_COMPARISON):
+    for digits in range(START_DIGITS, ALL_DIGITS + 1):
         text = rounded_text(utilisation, digits)
         if (float(text) <= 1) == holds:
             return text
-    return repr(utilisation)
+    # Demand and resistance are equal, and the check asks for less.
+    return rounded_text(utilisation, START_DIGITS)
 
 
 def utilisation(entry: Entry) -> float | None:
-    """Return demand over resistance of a check, if both sides are positive."""
+    """Return demand over resistance of a check, if demand >= 0 and resistance > 0."""
     left, right = entry.value
     if entry.source.sign in (">=", ">"):
         left, right = right, left
-    return left / right if left >= 0 and right > 0 else None
+    if left < 0 or right <= 0:
+        return None
+    ratio: float = left / right
+    return ratio if math.isfinite(ratio) else None

@@ -24,7 +24,7 @@ class GivenSource:
     basis: str = ""
 
     def digest_pieces(self) -> tuple[str, ...]:
-        """The typed text is what counts, not the float made of it."""
+        """Return the typed text; it counts, not the float made of it."""
         return (self.typed.text, self.unit)
 
 
@@ -35,7 +35,7 @@ class LookupSource:
     symbol: Symbol
     table: str
     row: str
-    number: str
+    typed: Typed
     unit: str
     title: str = ""
     origin: str = ""
@@ -43,8 +43,8 @@ class LookupSource:
     basis: str = ""
 
     def digest_pieces(self) -> tuple[str, ...]:
-        """Table, row and the number read."""
-        return (self.table, self.row, self.number, self.unit)
+        """Return table, row and the number read."""
+        return (self.table, self.row, self.typed.number, self.unit)
 
 
 @dataclass(frozen=True, slots=True)
@@ -61,7 +61,7 @@ class FoundSource:
     basis: str = ""
 
     def digest_pieces(self) -> tuple[str, ...]:
-        """Procedure, version, settings and closing criterion; never the value."""
+        """Return procedure, version, settings and closing criterion; never the value."""
         settings = [f"{k}={v!r}" for k, v in sorted(self.settings.items())]
         return (
             self.procedure.name,
@@ -82,5 +82,5 @@ class ShownSource:
     basis: str = ""
 
     def digest_pieces(self) -> tuple[str, ...]:
-        """Title and text; the shapes follow from the entries the figure rests on."""
+        """Return title and text; the shapes follow from the entries the figure rests on."""
         return (self.title, self.text)

@@ -1,1 +1,1 @@
-""""""
+"""The catalogue: what the standards say, as formulas, tables and editions."""

@@ -52,7 +52,7 @@ class PrintedTable:
 class PrintedRow:
     """One entry, ready to be laid out.
 
-    ``chains`` hold the working, ``result`` the last piece ("M_r = 551 kN·m"), ``verdict`` the
+    ``inputs`` are the values that a procedure was given, ``chains`` hold the working, ``result`` the last piece ("M_r = 551 kN·m"), ``verdict`` the
     word for a check or decision, ``ratio`` its printed utilisation, ``remarks`` short sentences
     in small print (source, basis, empirical numbers as text).
     """
@@ -62,6 +62,7 @@ class PrintedRow:
     label: str
     title: str
     clause: str
+    inputs: tuple[Math, ...] = ()
     chains: tuple[Chain, ...] = ()
     result: Math | None = None
     verdict: str = ""
@@ -119,12 +120,24 @@ def printed_row(
         id=entry["id"],
         kind=entry["kind"],
         label=entry.get("label", ""),
-        title=entry.get("title", ""),
+        title=_sentence_case(entry.get("title") or _meaning(entry, notation)),
         clause=entry.get("clause", ""),
         remarks=tuple(remarks),
         origins=_origins(entry.get("args", {}), notation, labels or {}),
         **own,
     )
+
+
+def _meaning(entry: Entry, notation: Notation) -> str:
+    """Return what a symbol means, for an entry without a title of its own."""
+    symbol = notation.get(entry.get("symbol", ""))
+    return symbol.meaning if symbol is not None else ""
+
+
+def _sentence_case(title: str) -> str:
+    """Begin a title with a capital, unless it begins with a symbol or a mark ("d", "10M")."""
+    first = title.partition(" ")[0]
+    return title[0].upper() + title[1:] if first.isalpha() and len(first) > 1 else title
 
 
 def _origins(
@@ -206,28 +219,26 @@ def _found(entry: Entry, notation: Notation) -> dict[str, Any]:
     procedure, printed = entry["procedure"], entry["printed"]
     closing = entry.get("closing")
     title = procedure.get("title") or procedure["name"]
-    texts = [f"Found by {title} ({procedure['name']}, version {procedure['version']})."]
-    chains = list(_given_values(printed.get("args", {}), notation))
-    if closing:
-        chains += criterion_chains(closing, notation)
+    text = f"Found by {title} ({procedure['name']}, version {procedure['version']}), with"
     return {
-        "chains": tuple(chains),
+        "inputs": _inputs(printed.get("args", {}), notation),
+        "chains": criterion_chains(closing, notation) if closing else (),
         "result": _equation(entry, notation),
-        "text": texts[0],
-        "conclusion": "The closing criterion above confirms the value by hand." * bool(closing),
+        "text": text if printed.get("args") else text.removesuffix(", with") + ".",
+        "conclusion": "The closing criterion confirms the value by hand." * bool(closing),
     }
 
 
-def _given_values(args: Mapping[str, str], notation: Notation) -> tuple[Chain, ...]:
+def _inputs(args: Mapping[str, str], notation: Notation) -> tuple[Math, ...]:
     """Show what a procedure was given, each argument as symbol = value."""
-    chains = []
+    shown = []
     for name, text in args.items():
         symbol = symbol_of(name, notation)
         # Arguments are printed in the internal unit of their kind, as in any substitution.
         known = UNITS.get(symbol.unit)
         value = value_math(text, known.internal if known else "")
-        chains.append(Chain(symbol_math(symbol), (row([EQUALS, value]),)))
-    return tuple(chains)
+        shown.append(row([symbol_math(symbol), EQUALS, value]))
+    return tuple(shown)
 
 
 def _figure(entry: Entry, _: Notation) -> dict[str, Any]:

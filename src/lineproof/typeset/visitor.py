@@ -22,6 +22,7 @@ from lineproof.typeset.nodes import (
     Fraction,
     Math,
     Root,
+    Row,
     Scripts,
     Sign,
     Thin,
@@ -146,12 +147,8 @@ class _Visitor:
         return Piece(row([first, sign, second]), _PRODUCT, signed, digit)
 
     def _fraction(self, top: Piece, bottom: Piece) -> Piece:
-        # A bar over a bar is read by its length alone, so an inner fraction gets brackets.
-        numerator = _fenced(top) if top.fraction else top.math
-        denominator = _fenced(bottom) if bottom.fraction else bottom.math
-        return Piece(
-            Fraction(numerator, denominator), digit=top.digit, raisable=False, fraction=True
-        )
+        sides = [_beside_bar(top), _beside_bar(bottom)]
+        return Piece(Fraction(*sides), digit=top.digit, raisable=False, fraction=True)
 
     def _power(self, base: Piece, exponent: Tree) -> Piece:
         index = _root_index(exponent)
@@ -174,6 +171,20 @@ class _Visitor:
         if function in _ANGLE_FUNCTIONS and isinstance(args[0].math, Digits):
             inside.append(Unit("deg"))
         return Piece(row([Word(function), Fence(row(inside))]), raisable=False)
+
+
+def _beside_bar(piece: Piece) -> Math:
+    """Set a side of a fraction; a fraction there gets brackets and a solidus.
+
+    A bar over a bar would be read by its length alone.
+    """
+    if not isinstance(piece.math, Fraction):
+        return piece.math
+    top, bottom = (
+        Fence(side) if isinstance(side, Row) else side
+        for side in (piece.math.top, piece.math.bottom)
+    )
+    return Fence(row([top, Sign("/", "comma"), bottom]))
 
 
 def _raised(below: Math, above: Math) -> Math:

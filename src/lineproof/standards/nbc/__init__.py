@@ -1,1 +1,1 @@
-""""""
+"""National Building Code: specified loads and load combinations."""

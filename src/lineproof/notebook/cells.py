@@ -1,0 +1,104 @@
+"""The cells of a stored notebook as plain data, read without running anything."""
+
+from __future__ import annotations
+
+import json
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+from pathlib import Path
+from typing import Any
+
+from lineproof.errors import UserError
+
+PARAMETERS = "parameters"
+LEFT_OUT = "remove-cell"
+LARGEST_NOTEBOOK = 64_000_000
+_FORMAT = 4
+_KINDS = ("code", "markdown", "raw")
+
+
+@dataclass(frozen=True, slots=True)
+class Cell:
+    """A cell: its number from 1, kind, source, tags, outputs."""
+
+    number: int
+    kind: str
+    source: str
+    tags: tuple[str, ...]
+    outputs: tuple[Mapping[str, Any], ...]
+
+    @property
+    def name(self) -> str:
+        """How an error calls the cell: its number and its first line."""
+        lines = [line for line in self.source.splitlines() if line.strip()]
+        first = lines[0].strip() if lines else ""
+        shown = first if len(first) <= 40 else first[:39] + "…"  # noqa: PLR2004
+        return f"cell {self.number} ({shown})" if shown else f"cell {self.number}"
+
+
+def load_notebook(path: Path) -> dict[str, Any]:
+    """Read a notebook file as plain JSON data; raises :class:`UserError`."""
+    try:
+        if path.stat().st_size > LARGEST_NOTEBOOK:
+            raise UserError(f"{path}: larger than {LARGEST_NOTEBOOK // 1_000_000} MB; not read")
+        data = json.loads(path.read_text(encoding="utf-8"))
+    except OSError as error:
+        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
+    except (ValueError, RecursionError):
+        raise UserError(f"{path}: not a notebook; give a file that Jupyter has saved") from None
+    check_format(data, str(path))
+    return dict(data)
+
+
+def check_format(data: object, name: str) -> None:
+    """Refuse what is not a notebook of format 4."""
+    if not isinstance(data, Mapping) or not isinstance(data.get("cells", ()), list):
+        raise UserError(f"{name}: not a notebook; give a file that Jupyter has saved")
+    if data.get("nbformat") != _FORMAT or "cells" not in data:
+        given = str(data.get("nbformat", "none"))[:20]
+        raise UserError(
+            f"{name}: notebook format {given} is not read; open it in JupyterLab and save it "
+            f"(that writes format {_FORMAT})"
+        )
+
+
+def cells_of(data: Mapping[str, Any], name: str) -> tuple[Cell, ...]:
+    """Return the cells of a notebook; raises :class:`UserError` for damaged ones."""
+    check_format(data, name)
+    cells, faults = [], []
+    for number, raw in enumerate(data["cells"], 1):
+        try:
+            cells.append(_cell(number, raw))
+        except (AttributeError, KeyError, TypeError, ValueError):
+            faults.append(f"{name}: cell {number} is damaged; open the notebook in JupyterLab")
+    if faults:
+        raise UserError(faults)
+    return tuple(cells)
+
+
+def _cell(number: int, raw: Mapping[str, Any]) -> Cell:
+    kind = raw["cell_type"]
+    if kind not in _KINDS:
+        raise ValueError
+    outputs = tuple(raw.get("outputs", ())) if kind == "code" else ()
+    for output in outputs:
+        if not isinstance(output["output_type"], str) or not isinstance(_data(output), Mapping):
+            raise TypeError
+    tags = raw.get("metadata", {}).get("tags", ())
+    return Cell(number, kind, joined(raw["source"]), tuple(map(str, tags)), outputs)
+
+
+def joined(text: str | list[str]) -> str:
+    """Return a multi-line text of a notebook file, which may be stored as a list of lines."""
+    return text if isinstance(text, str) else "".join(text)
+
+
+def _data(output: Mapping[str, Any]) -> Any:
+    return output.get("data", {})
+
+
+def data_of(cell: Cell, mime: str) -> Iterator[tuple[Mapping[str, Any], Any]]:
+    """Yield every output of a cell that holds data of a MIME type, with that data."""
+    for output in cell.outputs:
+        if mime in _data(output):
+            yield output, _data(output)[mime]

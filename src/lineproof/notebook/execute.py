@@ -1,0 +1,141 @@
+"""Running a calc notebook in a fresh kernel of this Python; what is stored is the same each time."""
+
+from __future__ import annotations
+
+import os
+import tempfile
+from collections.abc import Callable, Mapping
+from pathlib import Path
+from typing import Any
+
+from lineproof.errors import UserError
+from lineproof.notebook.cells import cells_of
+
+_WRONG_INPUT = "Wrong input: "
+_LANGUAGE = {"file_extension": ".py", "mimetype": "text/x-python", "name": "python"}
+_KERNEL = {"display_name": "Python 3 (ipykernel)", "language": "python", "name": "python3"}
+_TIMINGS = ("execution", "ExecuteTime", "papermill")
+
+Progress = Callable[[int, int], None]
+
+
+def execute(
+    data: Mapping[str, Any], name: str, folder: Path, progress: Progress | None = None
+) -> str:
+    """Run a notebook given as plain data and return the text of the executed notebook.
+
+    It runs in ``folder``; ``progress`` is told the number of code cells done and in all. Raises
+    :class:`UserError` with the cell, and what it said, at the first cell that fails.
+    """
+    import nbformat  # noqa: PLC0415 - Jupyter is imported on first use only
+    from nbclient.exceptions import (  # noqa: PLC0415
+        CellExecutionError,
+        CellTimeoutError,
+        DeadKernelError,
+    )
+
+    notebook = nbformat.from_dict(_cleared(data))  # type: ignore[no-untyped-call]
+    with tempfile.TemporaryDirectory(prefix="lineproof-") as scratch:
+        log = Path(scratch) / "kernel.log"
+        try:
+            _run(notebook, folder, Path(scratch), log, progress)
+        except CellExecutionError:
+            raise UserError(failures(notebook, name)) from None
+        except (CellTimeoutError, DeadKernelError, RuntimeError) as error:
+            raise UserError(f"{name}: {_why_stopped(error, log)}") from None
+    return _stored(notebook)
+
+
+def _run(
+    notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progress | None
+) -> None:
+    from nbclient import NotebookClient  # noqa: PLC0415
+
+    codes = [n for n, cell in enumerate(notebook.cells) if cell.cell_type == "code"]
+    done = progress or (lambda _done, _total: None)
+
+    def tell(cell_index: int, **_: object) -> None:
+        done(codes.index(cell_index) + 1, len(codes))
+
+    class Runner(NotebookClient):
+        def create_kernel_manager(self) -> Any:
+            self.km = _kernel_manager(scratch)
+            return self.km
+
+    client = Runner(
+        notebook,
+        timeout=None,
+        record_timing=False,
+        coalesce_streams=True,
+        resources={"metadata": {"path": str(folder)}},
+        on_cell_executed=tell,
+    )
+    # The user's own start-up files of IPython must not change a calculation.
+    with log.open("wb") as stderr:
+        client.execute(env=os.environ | {"IPYTHONDIR": str(scratch)}, stderr=stderr)
+
+
+def _kernel_manager(scratch: Path) -> Any:
+    """Return a kernel manager that starts this interpreter, whatever kernels are installed."""
+    from ipykernel.kernelspec import RESOURCES, get_kernel_dict  # noqa: PLC0415
+    from jupyter_client.kernelspec import KernelSpec  # noqa: PLC0415
+    from jupyter_client.manager import AsyncKernelManager  # noqa: PLC0415
+
+    class ThisPython(AsyncKernelManager):
+        @property
+        def kernel_spec(self) -> KernelSpec:
+            return KernelSpec(resource_dir=RESOURCES, **get_kernel_dict())
+
+    made = ThisPython(connection_file=str(scratch / "kernel.json"))
+    if os.name == "posix":  # sockets in a private folder: other users of the machine cannot listen
+        made.transport, made.ip = "ipc", str(scratch / "kernel")
+    return made
+
+
+def _why_stopped(error: Exception, log: Path) -> str:
+    said = log.read_text(encoding="utf-8", errors="replace").strip().splitlines()
+    reason = said[-1] if said else (str(error).strip().splitlines() or [type(error).__name__])[0]
+    return f"Python stopped while running it ({reason[:200]})"
+
+
+def _cleared(data: Mapping[str, Any]) -> dict[str, Any]:
+    """Return a copy without outputs, counts and timings, every cell with an id."""
+    cells = []
+    for number, raw in enumerate(data["cells"], 1):
+        kept = {k: v for k, v in raw.get("metadata", {}).items() if k not in _TIMINGS}
+        cell = dict(raw) | {"metadata": kept, "id": str(raw.get("id") or f"cell-{number}")}
+        if cell["cell_type"] == "code":
+            cell |= {"outputs": [], "execution_count": None}
+        cells.append(cell)
+    metadata = dict(data.get("metadata", {})) | {"kernelspec": _KERNEL, "language_info": _LANGUAGE}
+    return {"cells": cells, "metadata": metadata, "nbformat": 4, "nbformat_minor": 5}
+
+
+def _stored(notebook: Any) -> str:
+    """Return the text of an executed notebook as it is saved."""
+    from nbformat import v4  # noqa: PLC0415
+
+    notebook.metadata["kernelspec"] = dict(_KERNEL)
+    # The kernel reports its exact version here, which differs from machine to machine.
+    notebook.metadata["language_info"] = dict(_LANGUAGE)
+    text: str = v4.writes(notebook)
+    return text.rstrip("\n") + "\n"
+
+
+def failures(notebook: Mapping[str, Any], name: str) -> list[str]:
+    """Return what the failed cells of an executed notebook said, one sentence per fault."""
+    faults: list[str] = []
+    for cell in cells_of(notebook, name):
+        for output in cell.outputs:
+            if output["output_type"] == "error":
+                faults.extend(f"{name}: {cell.name}: {fault}" for fault in _said(output))
+    return faults or [f"{name}: a cell failed without saying why; run it in JupyterLab"]
+
+
+def _said(output: Mapping[str, Any]) -> list[str]:
+    """Tell a fault of the input, shown as such by the sheet, from any other exception."""
+    lines = [str(line) for line in output.get("traceback", ())]
+    if lines and all(line.startswith(_WRONG_INPUT) for line in lines):
+        return [line.removeprefix(_WRONG_INPUT) for line in lines]
+    value = str(output.get("evalue", "")).strip().splitlines()
+    return [": ".join(filter(None, [str(output.get("ename", "")), value[-1] if value else ""]))]

@@ -1,0 +1,160 @@
+"""Clauses 8.1, 10.1 and 10.5.2: moment resistance and the reinforcement required for a moment."""
+
+from __future__ import annotations
+
+from functools import partial
+
+from lineproof.formula import FROM_MEMORY, criterion, formula
+from lineproof.standards.a23_3.notation import NOTATION
+from lineproof.standards.references import MECHANICS
+
+_formula = partial(formula, notation=NOTATION)
+_criterion = partial(criterion, notation=NOTATION)
+
+BLOCK_IN_FLANGE_DEPTH = _formula(
+    "a_1 = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)",
+    clause="10.1.7",
+    title="Depth of the block if it stays in the flange",
+    basis=FROM_MEMORY,
+)
+IN_FLANGE = _criterion(
+    "a_1 <= h_f",
+    clause="10.1.7",
+    title="Where the stress block ends",
+    basis=MECHANICS,
+    yes="The block stays in the flange: the section acts as a rectangle of width b.",
+    no="The block leaves the flange: flange and web are taken apart.",
+    key="block-in-flange",
+)
+BLOCK_RECTANGULAR = _formula(
+    "a = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)",
+    clause="10.1.7",
+    title="Depth of the stress block",
+    basis=FROM_MEMORY,
+)
+FLANGE_FORCE = _formula(
+    "C_f = alpha_1*phi_c*f_c*(b - b_w)*h_f",
+    clause="10.1.7",
+    title="Compression in the overhanging flanges",
+    basis=FROM_MEMORY,
+)
+BLOCK_IN_WEB = _formula(
+    "a = (phi_s*A_s*f_y - C_f)/(alpha_1*phi_c*f_c*b_w)",
+    clause="10.1.7",
+    title="Depth of the stress block, in the web",
+    basis=FROM_MEMORY,
+)
+NEUTRAL_AXIS = _formula(
+    "c = a/beta_1", clause="10.1.7", title="Depth of the neutral axis", basis=FROM_MEMORY
+)
+M_R_RECTANGULAR = _formula(
+    "M_r = phi_s*A_s*f_y*(d - a/2)",
+    clause="10.1",
+    title="Factored moment resistance",
+    basis=MECHANICS,
+)
+M_R_TEE = _formula(
+    "M_r = C_f*(d - h_f/2) + (phi_s*A_s*f_y - C_f)*(d - a/2)",
+    clause="10.1",
+    title="Factored moment resistance, flange and web",
+    basis=MECHANICS,
+)
+STRENGTH = _criterion(
+    "M_f <= M_r",
+    clause="8.1.3",
+    title="Moment resistance",
+    basis=FROM_MEMORY,
+    yes="The moment resistance is sufficient.",
+    no="The moment resistance is NOT sufficient.",
+    key="strength",
+)
+
+YIELD_LIMIT = _formula(
+    "c_d = 700/(700 + f_y)",
+    clause="10.5.2",
+    title="Limit of c/d for bars taken to yield",
+    basis=FROM_MEMORY,
+    numbers={"700": "MPa"},
+)
+YIELDS = _criterion(
+    "c/d <= c_d",
+    clause="10.5.2",
+    title="Yield of the tension bars",
+    basis=FROM_MEMORY,
+    yes="The bars yield before the concrete crushes.",
+    no="The bars do NOT yield before the concrete crushes: less steel or a deeper section.",
+    key="yield",
+)
+
+M_R_FLANGE_FULL = _formula(
+    "M_rf = alpha_1*phi_c*f_c*b*h_f*(d - h_f/2)",
+    clause="10.1",
+    title="Moment resistance with the block just filling the flange",
+    basis=MECHANICS,
+)
+NEEDS_FLANGE_ONLY = _criterion(
+    "M_f <= M_rf",
+    clause="10.1",
+    title="Whether the flange alone balances the moment",
+    basis=MECHANICS,
+    yes="The block needed for the moment stays in the flange.",
+    no="The block needed for the moment reaches into the web.",
+    key="flange-is-enough",
+)
+BLOCK_REQUIRED = _formula(
+    "a_r = d - sqrt(d**2 - 2*M_f/(alpha_1*phi_c*f_c*b))",
+    clause="10.1",
+    title="Depth of the block needed for the moment",
+    basis=MECHANICS,
+)
+A_S_REQUIRED = _formula(
+    "A_sr = alpha_1*phi_c*f_c*b*a_r/(phi_s*f_y)",
+    clause="10.1",
+    title="Reinforcement required for the moment",
+    basis=MECHANICS,
+)
+WEB_MOMENT = _formula(
+    "M_rw = M_f - C_f*(d - h_f/2)",
+    clause="10.1",
+    title="Moment left to the web",
+    basis=MECHANICS,
+)
+BLOCK_REQUIRED_WEB = _formula(
+    "a_r = d - sqrt(d**2 - 2*M_rw/(alpha_1*phi_c*f_c*b_w))",
+    clause="10.1",
+    title="Depth of the block needed for the moment, in the web",
+    basis=MECHANICS,
+)
+A_S_REQUIRED_WEB = _formula(
+    "A_sr = (C_f + alpha_1*phi_c*f_c*b_w*a_r)/(phi_s*f_y)",
+    clause="10.1",
+    title="Reinforcement required for the moment, flange and web",
+    basis=MECHANICS,
+)
+ENOUGH_STEEL = _criterion(
+    "A_sr <= A_s",
+    clause="8.1.3",
+    title="Reinforcement provided for the moment",
+    basis=MECHANICS,
+    yes="The reinforcement provided covers what the moment requires.",
+    no="The reinforcement provided does NOT cover what the moment requires.",
+    key="steel-for-moment",
+)
+
+FORMULAS = (
+    BLOCK_IN_FLANGE_DEPTH,
+    BLOCK_RECTANGULAR,
+    FLANGE_FORCE,
+    BLOCK_IN_WEB,
+    NEUTRAL_AXIS,
+    M_R_RECTANGULAR,
+    M_R_TEE,
+    YIELD_LIMIT,
+    M_R_FLANGE_FULL,
+    BLOCK_REQUIRED,
+    A_S_REQUIRED,
+    WEB_MOMENT,
+    BLOCK_REQUIRED_WEB,
+    A_S_REQUIRED_WEB,
+)
+CRITERIA = (IN_FLANGE, STRENGTH, YIELDS, NEEDS_FLANGE_ONLY, ENOUGH_STEEL)

@@ -1,0 +1,29 @@
+"""Where each fact of the catalogue comes from; a formula names one of these as its basis."""
+
+from __future__ import annotations
+
+from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY
+
+MECHANICS = "mechanics"
+"""Follows from statics, geometry and strain compatibility alone; no clause is needed for it."""
+
+NBC_LOADS = "NBC 2020, Division B, 4.1.3 to 4.1.5; same values in the NBC 2015 format"
+NBC_APPENDIX_D = "NBC 2020, Division B, Appendix D"
+BENTZ_2006 = "Bentz, paper on the 2004 shear provisions, Springer 2006 (factor quoted there)"
+F_R_QUOTED = "A23.3-14 as quoted in a public discussion of the cracking moment"
+G30_18_TABLE = "CSA G30.18 bar sizes, public tables of bar data"
+COVER_QUOTED = "A23.1 Table 17 as quoted in a public discussion (75 mm; 30 mm for beams, N)"
+
+BASES = frozenset(
+    {
+        COMMON_PRACTICE,
+        FROM_MEMORY,
+        MECHANICS,
+        NBC_LOADS,
+        NBC_APPENDIX_D,
+        BENTZ_2006,
+        F_R_QUOTED,
+        G30_18_TABLE,
+        COVER_QUOTED,
+    }
+)
