@@ -118,7 +118,7 @@ def test_computed_noise_is_not_recorded() -> None:
         (plain() | {"scale": 0}, "scale must be a number"),
         (plain() | {"shapes": {}}, "shapes must be a list"),
         (plain() | {"shapes": [{}] * 4001}, "at most 4000"),
-        (plain() | {"shapes": [plain()["shapes"][0]] * 61}, "hatched shapes"),
+        (plain() | {"shapes": [plain()["shapes"][0]] * 134}, "hatch with 402 corners"),
         (plain() | {"script": 1}, "unknown field 'script'"),
     ],
     ids=range(32),

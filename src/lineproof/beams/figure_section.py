@@ -251,7 +251,8 @@ def section_figure(
     shown = choose_scale(shape, PAGE_WIDTH - reach - 36.0)
     first = _first_offset(shape, shown, content)
     right = first + 12.0
-    left = max((20.0 if shape.kind == "T" else 2.0) + shown.left * shown.scale, reach)
+    beyond = {"rectangle": 2.0, "L": 2.0, "T": 9.0 if _upright(shape, shown) else 20.0}
+    left = max(beyond[shape.kind] + shown.left * shown.scale, reach)
     width = left + (shape.b_w + shown.right) * shown.scale + right
     shapes = [
         *outline(shape, shown),
@@ -282,8 +283,17 @@ def _first_offset(shape: SectionShape, shown: Shown, content: _Content) -> float
     if shape.kind == "T":
         names = max((text_width(words(row.label), TEXT_SIZE) for row in content.top), default=0.0)
         return max(7.0, CALLOUT_REACH + names + 5.0 - shown.right * shown.scale)
-    needed = text_width(symbol("h", "f"), TEXT_SIZE) + text_width(words(" = 000"), TEXT_SIZE)
-    return 15.0 if shape.h_f * shown.scale > needed + FIT_MARGIN else 9.5 + BESIDE_GAP + needed
+    return 15.0 if _upright(shape, shown) else 9.5 + BESIDE_GAP + _slab_text(shape)
+
+
+def _slab_text(shape: SectionShape) -> float:
+    """Width of the text of h_f, mm on paper."""
+    return text_width((*symbol("h", "f"), (f" = {shape.h_f:.0f}", "roman")), TEXT_SIZE)
+
+
+def _upright(shape: SectionShape, shown: Shown) -> bool:
+    """Tell whether the text of h_f fits along its dimension."""
+    return shape.h_f * shown.scale >= _slab_text(shape) + FIT_MARGIN
 
 
 def _steel(shape: SectionShape, content: _Content) -> list[Shape]:

@@ -1,1 +1,116 @@
-""""""
+"""The command ``lineproof``: parsing and exit codes; each command's work is imported when run.
+
+Exit codes: 0 done; 1 a check does not hold or a finding; 2 wrong input.
+"""
+
+from __future__ import annotations
+
+import argparse
+import os
+import sys
+from collections.abc import Sequence
+from importlib import import_module
+from pathlib import Path
+
+from lineproof.errors import UserError
+
+DONE, FINDING, WRONG_INPUT, STOPPED = 0, 1, 2, 130
+
+
+class _Version(argparse.Action):
+    """Print the installed version; looked up only when asked for."""
+
+    def __call__(self, parser: argparse.ArgumentParser, *_: object) -> None:
+        from importlib.metadata import version  # noqa: PLC0415 - 20 ms
+
+        sys.stdout.write(f"lineproof {version('lineproof')}\n")
+        parser.exit()
+
+
+def parser() -> argparse.ArgumentParser:
+    """Return the parser of all commands."""
+    made = argparse.ArgumentParser(
+        prog="lineproof",
+        description="Printable, checkable calculations of reinforced concrete beams.",
+        epilog="Exit codes: 0 done; 1 a check does not hold or a finding; 2 wrong input.",
+    )
+    made.add_argument("--version", action=_Version, nargs=0, help="show the version and stop")
+    commands = made.add_subparsers(dest="command", metavar="COMMAND", required=True)
+    _add_issue(commands)
+    _add_recheck(commands)
+    _add_lines(commands)
+    return made
+
+
+_Commands = argparse._SubParsersAction  # noqa: SLF001 - argparse has no public name for it
+
+
+def _add_issue(commands: _Commands[argparse.ArgumentParser]) -> None:
+    issue = commands.add_parser(
+        "issue",
+        help="re-execute calcs, compare them with what is stored, print the package",
+        description="Re-execute calc notebooks, compare every line with what is stored, and print "
+        "the package: PDF, HTML and record, all of them or none. Several notebooks of one "
+        "project make one package.",
+    )
+    issue.add_argument("notebooks", nargs="+", type=Path, metavar="CALC.ipynb")
+    issue.add_argument(
+        "--into", type=Path, metavar="DIR", help="folder to print into (default: issued, beside"
+        " the first notebook)",
+    )  # fmt: skip
+    issue.add_argument(
+        "--paper", choices=("letter", "a4"), help="paper size (default: the project's, else letter)"
+    )
+    issue.add_argument(
+        "--update", action="store_true",
+        help="where stored values disagree with the re-run, store the new ones in the notebook",
+    )  # fmt: skip
+
+
+def _add_recheck(commands: _Commands[argparse.ArgumentParser]) -> None:
+    recheck = commands.add_parser(
+        "recheck",
+        help="re-execute calcs and compare every line with what is stored; change nothing",
+        description="Re-execute calc notebooks and compare every line with what is stored. "
+        "Nothing is changed. Exit code 1 when a line differs or a check does not hold.",
+    )
+    recheck.add_argument("notebooks", nargs="+", type=Path, metavar="CALC.ipynb")
+
+
+def _add_lines(commands: _Commands[argparse.ArgumentParser]) -> None:
+    lines = commands.add_parser(
+        "lines",
+        help="show the lines of a notebook, a printed PDF or HTML, or a record; runs nothing",
+        description="Show every recorded line of a calc. Nothing in the file is run.",
+    )
+    lines.add_argument("file", type=Path, metavar="FILE")
+    lines.add_argument("--json", action="store_true", help="print JSON instead of a table")
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run a command and return its exit code; a user's mistake shows no traceback."""
+    for stream in (sys.stdout, sys.stderr):
+        reconfigure = getattr(stream, "reconfigure", None)
+        if reconfigure is not None:  # a terminal without a character shows its code
+            reconfigure(errors="backslashreplace")
+    options = parser().parse_args(arguments)
+    try:
+        code = import_module(f"lineproof.cli.{options.command}").run(options)
+        sys.stdout.flush()
+    except UserError as error:
+        sys.stdout.flush()
+        for fault in error.faults:
+            sys.stderr.write(f"{_visible(fault)}\n")
+        return WRONG_INPUT
+    except KeyboardInterrupt:
+        sys.stderr.write("stopped; nothing has been written\n")
+        return STOPPED
+    except BrokenPipeError:  # the reader of our output, such as head, has closed it
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return DONE
+    return int(code)
+
+
+def _visible(text: str) -> str:
+    """Show control characters by their code: text of a file must not steer the terminal."""
+    return "".join(c if c.isprintable() or c in "\n\u202f" else f"<U+{ord(c):04X}>" for c in text)

@@ -23,6 +23,8 @@ from lineproof.drawing.shapes import (
 TICK_TEXT = 2.6
 TICK_LENGTH = 1.0
 CURVE_WEIGHT = 0.45
+MOST_DECIMALS = 9
+GROUPED_FROM = 10_000
 
 
 @dataclass(frozen=True, slots=True)
@@ -64,12 +66,14 @@ def nice_ticks(low: float, high: float, about: int = 5) -> tuple[float, ...]:
 def tick_texts(ticks: Sequence[float]) -> tuple[str, ...]:
     """Print ticks with the decimals their step needs, true minus and thin-space groups."""
     decimals = 0
-    while decimals < 9 and any(abs(tick - round(tick, decimals)) > 1e-9 for tick in ticks):
+    while decimals < MOST_DECIMALS and any(
+        not math.isclose(tick, round(tick, decimals), abs_tol=1e-9) for tick in ticks
+    ):
         decimals += 1
     texts = []
     for tick in ticks:
         text = f"{abs(tick):,.{decimals}f}"
-        text = text.replace(",", "\u2009" if abs(tick) >= 10_000 else "")
+        text = text.replace(",", "\u2009" if abs(tick) >= GROUPED_FROM else "")
         texts.append(f"−{text}" if tick < 0 else text)
     return tuple(texts)
 

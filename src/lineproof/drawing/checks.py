@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from typing import get_args
+import unicodedata
+from collections.abc import Callable, Sequence
+from typing import TypeGuard, get_args
 
 from lineproof.drawing.shapes import (
     Arc,
@@ -24,6 +25,8 @@ MAX_TEXT = 400
 MAX_ALT = 4000
 MAX_RUNS = 40
 MAX_COORDINATE = 1e7
+FEWEST_POINTS = 2
+MAX_POINTS = 10_000
 
 
 class FaultError(ValueError):
@@ -56,7 +59,7 @@ def _text(longest: int, shortest: int = 0) -> Callable[[object], str]:
         if (
             isinstance(value, str)
             and shortest <= len(value.strip() if shortest else value) <= longest
-            and not any(ord(c) < 32 or 0xD800 <= ord(c) <= 0xDFFF for c in value)
+            and not any(unicodedata.category(c) in {"Cc", "Cs"} for c in value)
         ):
             return value
         msg = f"must be text of {shortest} to {longest} characters without control characters"
@@ -77,17 +80,22 @@ _run_text = _text(MAX_TEXT)
 _run_style = _one_of(get_args(Style))
 
 
+def _is_pair(value: object) -> TypeGuard[Sequence[object]]:
+    pair = 2
+    return isinstance(value, (list, tuple)) and len(value) == pair
+
+
 def _point(value: object) -> Point:
-    if isinstance(value, (list, tuple)) and len(value) == 2:
+    if _is_pair(value):
         return (_coordinate(value[0]), _coordinate(value[1]))
     msg = "must be two numbers [x, y]"
     raise FaultError(msg)
 
 
 def _points(value: object) -> tuple[Point, ...]:
-    if isinstance(value, (list, tuple)) and 2 <= len(value) <= 10_000:
+    if isinstance(value, (list, tuple)) and FEWEST_POINTS <= len(value) <= MAX_POINTS:
         return tuple(_point(point) for point in value)
-    msg = "must be a list of 2 to 10000 points"
+    msg = f"must be a list of {FEWEST_POINTS} to {MAX_POINTS} points"
     raise FaultError(msg)
 
 
@@ -97,7 +105,7 @@ def _runs(value: object) -> Runs:
         raise FaultError(msg)
     runs = []
     for item in value:
-        if not isinstance(item, (list, tuple)) or len(item) != 2:
+        if not _is_pair(item):
             msg = "must hold pairs [text, style]"
             raise FaultError(msg)
         runs.append((_run_text(item[0]), _run_style(item[1])))

@@ -7,6 +7,7 @@ import math
 from lineproof.drawing.shapes import Point
 
 SPACING = 1.1
+SHORTEST = 1e-6
 _COS45 = math.sqrt(0.5)
 
 
@@ -14,10 +15,8 @@ def hatch_lines(points: tuple[Point, ...], spacing: float = SPACING) -> list[tup
     """Return the hatch lines inside a closed polygon, in the units of its points.
 
     The lines lie on one family for the whole sheet, so neighbouring polygons hatch alike.
-    A polygon of fewer than three points has none.
+    ``points`` holds at least one point; fewer than three enclose nothing and give no line.
     """
-    if len(points) < 3:
-        return []
     turned = [((x + y) * _COS45, (y - x) * _COS45) for x, y in points]
     first = math.ceil(min(v for _, v in turned) / spacing)
     last = math.floor(max(v for _, v in turned) / spacing)
@@ -26,7 +25,7 @@ def hatch_lines(points: tuple[Point, ...], spacing: float = SPACING) -> list[tup
         level = number * spacing
         cuts = sorted(_crossings(turned, level))
         for start, end in zip(cuts[::2], cuts[1::2], strict=False):
-            if end - start > 1e-6:
+            if end - start > SHORTEST:
                 lines.append((_back(start, level), _back(end, level)))
     return lines
 

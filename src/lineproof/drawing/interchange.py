@@ -36,7 +36,7 @@ _NAMES = {kind: name for name, kind in _KINDS.items()}
 _FIGURE_FIELDS = ("width", "height", "scale", "origin", "shapes", "alt", "caption")
 MAX_SHAPES = 4000
 MAX_POINTS = 40_000
-MAX_HATCHED = 60
+MAX_HATCHED_CORNERS = 400
 MAX_FAULTS = 20
 FIELD_MARGIN = 60.0
 
@@ -143,9 +143,13 @@ def _check_size(figure: Figure, faults: FaultList) -> None:
     if len(points) > MAX_POINTS:
         faults.add(f"figure: {len(points)} points; at most {MAX_POINTS} can be drawn")
         return
-    hatched = sum(isinstance(s, Polyline) and s.fill == "hatch" for s in figure.shapes)
-    if hatched > MAX_HATCHED:
-        faults.add(f"figure: {hatched} hatched shapes; at most {MAX_HATCHED} can be drawn")
+    corners = sum(
+        len(shape.points)
+        for shape in figure.shapes
+        if isinstance(shape, Polyline) and shape.fill == "hatch"
+    )
+    if corners > MAX_HATCHED_CORNERS:  # each may cost hundreds of lines
+        faults.add(f"figure: hatch with {corners} corners; at most {MAX_HATCHED_CORNERS}")
     for point in points:
         x, y = figure.paper(point)
         if not (

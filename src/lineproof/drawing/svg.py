@@ -74,6 +74,7 @@ def _shape(shape: PaperShape, height: float) -> str:
             return _arc(shape, height)
 
 
+_HALF_TURN = 180.0
 _NO_STROKE = ' stroke="none"'
 
 
@@ -100,7 +101,7 @@ def _arc(arc: Arc, height: float) -> str:
         )
         for angle in (arc.start_angle, arc.end_angle)
     )
-    radius, large = _number(arc.radius), int(sweep > 180.0)
+    radius, large = _number(arc.radius), int(sweep > _HALF_TURN)
     path = f"M{start[0]} {start[1]}A{radius} {radius} 0 {large} 0 {end[0]} {end[1]}"
     return f'<path d="{path}"{_stroke(arc)}/>'
 

@@ -1,1 +1,1 @@
-""""""
+"""Calc notebooks: parts under their cells, reading, executing, comparing, exporters."""

@@ -1,7 +1,7 @@
-"""Parts in a notebook: HTML with TeX, plain text, and an anchor by which an exporter finds them.
+r"""Parts in a notebook: HTML with TeX, plain text, and an anchor by which an exporter finds them.
 
 JupyterLab shows untrusted HTML without MathML and SVG but keeps their text, so that a fraction
-a/2 = 26 reads "a2=26". TeX between ``\\( \\)``, tables and pictures as data URIs survive.
+a/2 = 26 reads "a2=26". TeX between ``\( \)``, tables and pictures as data URIs survive.
 """
 
 from __future__ import annotations

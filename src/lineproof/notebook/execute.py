@@ -1,4 +1,4 @@
-"""Running a calc notebook in a fresh kernel of this Python; what is stored is the same each time."""
+"""Running a calc notebook in a fresh kernel of this Python; the same run stores the same text."""
 
 from __future__ import annotations
 
@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import Any
 
 from lineproof.errors import UserError
-from lineproof.notebook.cells import cells_of
+from lineproof.notebook.cells import cells_of, joined
 
 _WRONG_INPUT = "Wrong input: "
 _LANGUAGE = {"file_extension": ".py", "mimetype": "text/x-python", "name": "python"}
@@ -46,9 +46,7 @@ def execute(
     return _stored(notebook)
 
 
-def _run(
-    notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progress | None
-) -> None:
+def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progress | None) -> None:
     from nbclient import NotebookClient  # noqa: PLC0415
 
     codes = [n for n, cell in enumerate(notebook.cells) if cell.cell_type == "code"]
@@ -103,7 +101,11 @@ def _cleared(data: Mapping[str, Any]) -> dict[str, Any]:
     cells = []
     for number, raw in enumerate(data["cells"], 1):
         kept = {k: v for k, v in raw.get("metadata", {}).items() if k not in _TIMINGS}
-        cell = dict(raw) | {"metadata": kept, "id": str(raw.get("id") or f"cell-{number}")}
+        cell = dict(raw) | {
+            "metadata": kept,
+            "id": str(raw.get("id") or f"cell-{number}"),
+            "source": joined(raw["source"]),
+        }
         if cell["cell_type"] == "code":
             cell |= {"outputs": [], "execution_count": None}
         cells.append(cell)
@@ -118,7 +120,7 @@ def _stored(notebook: Any) -> str:
     notebook.metadata["kernelspec"] = dict(_KERNEL)
     # The kernel reports its exact version here, which differs from machine to machine.
     notebook.metadata["language_info"] = dict(_LANGUAGE)
-    text: str = v4.writes(notebook)
+    text: str = v4.writes(notebook)  # type: ignore[no-untyped-call]
     return text.rstrip("\n") + "\n"
 
 

@@ -153,7 +153,7 @@ def _check_fresh(
     name: str,
     faults: FaultList,
 ) -> None:
-    for cell in changed_cells(cells, [anchor.note for anchor in anchors.values()]):
+    for cell in changed_cells(cells):
         faults.add(f"{name}: {cell.name} was changed after it was run; {RUN_ALL}")
     for key, anchor in anchors.items():
         made_from = anchor.note.get("part")
@@ -164,13 +164,28 @@ def _check_fresh(
             )
 
 
-def changed_cells(cells: tuple[Cell, ...], notes: list[Mapping[str, Any]]) -> list[Cell]:
+def _notes_of(cells: tuple[Cell, ...]) -> list[Mapping[str, Any]]:
+    """Return what the outputs of a notebook say of their making."""
+    notes = [
+        output.get("metadata", {}).get(METADATA, {})
+        for cell in cells
+        for output, _ in data_of(cell, ANCHOR)
+    ]
+    return [note for note in notes if isinstance(note, Mapping)]
+
+
+def changed_cells(cells: tuple[Cell, ...]) -> list[Cell]:
     """Return the code cells that do not stand as they were run, up to the last part shown.
 
     The outputs' metadata carry the hashes of the cells run; where a tool has stripped them,
     nothing can be told.
     """
-    ran = {known for note in notes for known in note.get("cells", ()) if isinstance(known, str)}
+    ran = {
+        known
+        for note in _notes_of(cells)
+        for known in note.get("cells", ())
+        if isinstance(known, str)
+    }
     if not ran:
         return []
     last = max((cell.number for cell in cells if any(data_of(cell, ANCHOR))), default=0)

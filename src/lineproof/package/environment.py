@@ -184,8 +184,16 @@ def _filters() -> dict[str, Any]:
         "sentence": lambda text: text[:1].upper() + text[1:],
         "yes_no": lambda truth: "yes" if truth else "no",
         "verdict": _verdict,
+        "length_class": _length_class,
         "covered_text": lambda item: f"{item.check} ({item.clause})" if item.clause else item.check,
     }
+
+
+def _length_class(title: str) -> str:
+    """Name the size of a title: long ones are set smaller, since all of it is printed."""
+    if len(title) < 90:  # noqa: PLR2004 - about two lines
+        return "title"
+    return "long" if len(title) < 500 else "very-long"  # noqa: PLR2004 - about half a page
 
 
 def _verdict(calc: Calc) -> str:

@@ -12,6 +12,28 @@ from lineproof.resources import folder
 from lineproof.typeset.glyphs import MISSING_NOTE
 
 
+_PIECES = {
+    "latin": "U+0000-00FF, U+0131, U+0152-0153, U+02BB-02BC, U+02C6, U+02DA, U+02DC, U+2009, "
+    "U+2013-2014, U+2018-201E, U+2020-2026, U+2032-2044, U+20AC, U+2122, U+2191, U+2193, U+2212",
+    "latin-ext": "U+0100-0130, U+0132-0151, U+0154-021B, U+0237, U+02C7, U+02D8-02D9, U+02DB, "
+    "U+02DD, U+1E80-1E9E, U+2113",
+    "greek": "U+0386-03F5",
+    "cyrillic": "U+0400-0491, U+2116",
+}
+_FACES = (("400-normal", "normal", "400"), ("400-italic", "italic", "400"), ("700-normal", "normal", "700"))
+FONTS = tuple(
+    (f"libertinus-serif-{piece}-{face}.woff2", style, weight)
+    for piece in _PIECES
+    for face, style, weight in _FACES
+)
+"""Font files of the page, each with its style and weight."""
+
+
+def unicode_ranges(file: str) -> str:
+    """Return the characters that a font file serves, for its style rule."""
+    return _PIECES[file.removeprefix("libertinus-serif-").rsplit("-", 2)[0]]
+
+
 def to_html(package: Package) -> str:
     """Print a package as a self-contained HTML page; the same package gives the same text."""
     from markupsafe import Markup  # noqa: PLC0415 - comes with jinja2, only printing needs it
@@ -23,6 +45,8 @@ def to_html(package: Package) -> str:
     return template.render(
         package=package,
         picture=picture,
+        fonts=FONTS,
+        ranges=unicode_ranges,
         style=Markup(_style()),  # noqa: S704 - our own style sheet
         missing_note=MISSING_NOTE,
     )

@@ -182,11 +182,13 @@ _TAGS = {
 
 
 def prose_html(prose: Prose) -> str:
-    """Return prose as safe HTML; headings begin at ``h4``."""
+    """Return prose as safe HTML; headings begin one level below those of the PDF."""
     return "".join(map(_html, prose.blocks))
 
 
 def _html(mark: Mark) -> str:
+    if mark.kind == "table":
+        return _html_table(mark)
     inside = "".join(map(_html, mark.children))
     if mark.kind in _TAGS:
         tag = _TAGS[mark.kind]
@@ -202,10 +204,8 @@ def _html(mark: Mark) -> str:
             lines = "\n".join(printable(line) for line in mark.text.split("\n"))
             return f"<pre><code>{escape(lines)}</code></pre>"
         case "heading":
-            return f"<h{mark.level}>{inside}</h{mark.level}>"
-        case "table":
-            return _html_table(mark)
-    return {"break": "<br>", "rule": "<hr>"}[mark.kind]
+            return f"<h{mark.level + 1}>{inside}</h{mark.level + 1}>"
+    return {"break": "<br />", "rule": "<hr />"}[mark.kind]
 
 
 def _html_table(table: Mark) -> str:

@@ -155,9 +155,7 @@ class _Builder:
                 "left": sides[0] / internal_factor(test.unit),
                 "right": sides[1] / internal_factor(test.unit),
                 "unit": test.unit,
-                "printed": self._printer.comparison(
-                    test, closing_args, sides, holds=holds
-                ),
+                "printed": self._printer.comparison(test, closing_args, sides, holds=holds),
             },
         }
 

@@ -44,6 +44,8 @@ class Entry:
 
     __slots__ = ("args", "digest_", "extra", "kind", "part", "source", "symbol", "value")
 
+    digest_: str
+
     def __init__(  # noqa: PLR0917 - the hot path: keywords cost time
         self,
         part: Part,
@@ -77,11 +79,17 @@ class Entry:
     @property
     def digest(self) -> str:
         """Hash of the entry's text and of all that it rests on."""
-        try:
-            return self.digest_
-        except AttributeError:
-            self.digest_ = digest_of(*self._pieces(), *[arg.digest for arg in self.args])
-            return self.digest_
+        waiting = [] if hasattr(self, "digest_") else [self]
+        while waiting:  # not by recursion: a calculation may be one long chain
+            entry = waiting[-1]
+            missing = [arg for arg in entry.args if not hasattr(arg, "digest_")]
+            if missing:
+                waiting.extend(missing)
+            else:
+                pieces = entry._pieces()  # noqa: SLF001 - another entry
+                entry.digest_ = digest_of(*pieces, *[arg.digest_ for arg in entry.args])
+                waiting.pop()
+        return self.digest_
 
     def _pieces(self) -> Iterable[str]:
         if self.kind in (LINE, DECISION, CHECK):

@@ -105,7 +105,7 @@ class Printer:
         }
         return {"args": texts, "left": left, "right": right, "unit": test.unit}
 
-    def _side(  # noqa: PLR0917 - one side of a comparison with all it rests on
+    def _side(
         self,
         tree: Tree,
         test: Criterion,

@@ -2,5 +2,6 @@
 
 from lineproof.sheet.sheet import PartView, Sheet
 from lineproof.sheet.tables import LookupTable
+from lineproof.sheet.trial import Trial
 
-__all__ = ["LookupTable", "PartView", "Sheet"]
+__all__ = ["LookupTable", "PartView", "Sheet", "Trial"]

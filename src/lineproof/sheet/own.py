@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Mapping
+from collections.abc import Callable, Iterable
 
 from lineproof.errors import UserError
 from lineproof.formula import (
@@ -16,9 +16,8 @@ from lineproof.formula import (
     parse_line,
 )
 from lineproof.quantity import unit_named
-from lineproof.record import Entry
 
-Units = Callable[[Iterable[str], Mapping[str, Entry]], dict[str, str]]
+Units = Callable[[Iterable[str]], dict[str, str]]
 
 
 def own_formula(
@@ -42,7 +41,7 @@ def own_criterion(
     made = criterion(text, unit=unit, title=title, notation=notation)
     if unit is None:
         bare = [side.id for side in (made.left, made.right) if isinstance(side, Name)]
-        known = units(made.names, {})
+        known = units(made.names)
         printed = known[bare[0]] if bare else ""
         made = criterion(text, unit=printed, title=title, notation=notation)
     return made

@@ -42,10 +42,12 @@ def _plain(value: object) -> Any:
 
 
 def _check_facts(path: Path, facts: dict[str, Any]) -> None:
-    faults = []
-    for table in ("project", "firm", "codes", "building", "location", "issue", "paper"):
-        if not isinstance(facts.get(table, {}), dict):
-            faults.append(f"{path}: {table!r} must be a table; write [{table}]")
+    tables = ("project", "firm", "codes", "building", "location", "issue", "paper")
+    faults = [
+        f"{path}: {table!r} must be a table; write [{table}]"
+        for table in tables
+        if not isinstance(facts.get(table, {}), dict)
+    ]
     for rows in ("drawings", "revisions", "confirmed"):
         given = facts.get(rows, [])
         if not (isinstance(given, list) and all(isinstance(row, dict) for row in given)):

@@ -2,15 +2,17 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Iterator, Mapping
-from contextlib import contextmanager
+import math
+from collections.abc import Callable, Iterable, Mapping
 from pathlib import Path
 from typing import Any, ClassVar
 
 from lineproof.errors import UserError
 from lineproof.formula import Criterion, Formula, Notation, Symbol, System, symbol_from_id
+from lineproof.formula.notation import check_id
 from lineproof.formula.proof import prove, prove_criterion
-from lineproof.quantity import QuantityInput, Typed, read_quantity
+from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
+from lineproof.quantity.units import UNITS, plain_spelling, units_of_kind
 from lineproof.record import Entry, Part, Procedure, Record
 from lineproof.record.build import build
 from lineproof.record.entry import (
@@ -23,15 +25,19 @@ from lineproof.record.entry import (
     LOOKUP,
     NOTE,
     TABLE,
-    VALUES,
 )
 from lineproof.record.procedures import run
 from lineproof.record.sources import FoundSource, GivenSource, LookupSource, ShownSource
+from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion, own_formula
+from lineproof.sheet.parts import Parts, check_key
 from lineproof.sheet.project import read_project
 from lineproof.sheet.tables import LookupTable
 
 __all__ = ["PartView", "Sheet"]
+
+_NOT_COMPUTED = (ArithmeticError, ValueError, TypeError)
+"""What arithmetic without a real result raises; TypeError where a complex root is compared."""
 
 
 class PartView:
@@ -41,7 +47,7 @@ class PartView:
         self.sheet, self.key = sheet, key
 
 
-class Sheet:
+class Sheet(Parts):
     """A calculation being made.
 
     Everything is recorded inside a part; opening an existing key again replaces that part in
@@ -68,6 +74,7 @@ class Sheet:
         project: Mapping[str, Any] | None = None,
         notation: Notation | None = None,
     ) -> None:
+        super().__init__()
         self.calc = {"id": calc_id, "title": title}
         self.project: dict[str, Any] = dict(project or {})
         self.notation = notation or Notation(())
@@ -75,87 +82,15 @@ class Sheet:
         self.member = ""
         self.scope = ""
         self.not_covered: list[Mapping[str, str]] = []
-        self.expected: dict[str, str] = {}
-        self._parts: dict[str, Part] = {}
-        self._stopped: dict[str, str] = {}
-        self._part: Part | None = None
-        self._scope_of_part: dict[str, Any] = {}
 
     @classmethod
     def open(cls, calc_id: str, *, project: str | Path, title: str = "") -> Sheet:
         """Start the calculation ``calc_id`` of the project whose facts stand in a TOML file."""
         return cls(calc_id, title, project=read_project(Path(project)))
 
-    # -- parts -------------------------------------------------------------------------------
-
-    @contextmanager
-    def part(self, key: str, title: str) -> Iterator[Part]:
-        """Open a part; an existing key is replaced in place. Parts do not nest."""
-        if self._part is not None:
-            msg = f"part {key!r} opened inside part {self._part.key!r}; close that one first"
-            raise UserError(msg)
-        _check_key(key)
-        part = Part(key, title)
-        before = self._parts.get(key)
-        self._parts[key] = part
-        self._part, self._scope_of_part = part, {}
-        try:
-            yield part
-        except BaseException:
-            self._stopped[key] = title
-            raise
-        finally:
-            self._part = None
-            if before is not None:
-                before.replaced = True
-        self._stopped.pop(key, None)
+    def _show_part(self, key: str) -> None:
         if Sheet.shown is not None:
             Sheet.shown(PartView(self, key))
-
-    @property
-    def parts(self) -> tuple[Part, ...]:
-        """The parts recorded so far, in order."""
-        return tuple(self._parts.values())
-
-    def entry(self, entry_id: str) -> Entry:
-        """Return a recorded entry by its id ``part-key/symbol``."""
-        key, _, symbol = entry_id.partition("/")
-        part = self._parts.get(key)
-        if part is None or symbol not in part.entries:
-            raise UserError(f"{entry_id!r} is not recorded{self._run_first(key)}")
-        return part.entries[symbol]
-
-    def _run_first(self, key: str) -> str:
-        call = self.expected.get(key)
-        return f"; run {call} first" if call else ""
-
-    def _open_part(self) -> Part:
-        if self._part is None:
-            raise UserError("nothing can be recorded outside a part; write 'with sheet.part(...):'")
-        return self._part
-
-    def _find(self, name: str) -> Entry:
-        hits = [part.entries[name] for part in self._parts.values() if name in part.entries]
-        values = [entry for entry in hits if entry.kind in VALUES]
-        if len(values) == 1:
-            return values[0]
-        if values:
-            places = ", ".join(entry.id for entry in values)
-            raise UserError(
-                f"{name} stands in {places}; say which: {name}=sheet.entry({values[0].id!r})"
-            )
-        waiting = [call for key, call in self.expected.items() if key not in self._parts]
-        hint = f" (not run yet: {', '.join(waiting)})" if waiting else ""
-        raise UserError(f"{name} is not recorded{hint}; give it first, or name it {name}=...")
-
-    def _record(self, entry: Entry) -> Entry:
-        part = self._open_part()
-        if entry.symbol in part.entries:
-            raise UserError(f"{entry.symbol} stands twice in part {part.key!r}; use another symbol")
-        part.entries[entry.symbol] = entry
-        if entry.kind in VALUES:
-            self._scope_of_part[entry.symbol] = entry
-        return entry
 
     # -- values ------------------------------------------------------------------------------
 
@@ -172,10 +107,16 @@ class Sheet:
     ) -> Entry:
         """Record a value as typed; its unit must be of the kind of ``unit`` or of the notation."""
         data = self._symbol(symbol, title)
+        if unit is not None:
+            unit = unit_named(unit).spelling
+            self._check_notation(symbol, unit)
+        elif symbol in self.notation:
+            unit = data.unit
         read = typed
         if not isinstance(read, Typed):
-            read = read_quantity(symbol, read, unit or data.unit or _typed_unit(symbol, typed))
-        printed = unit or data.unit or read.unit
+            read = read_quantity(symbol, read, _typed_unit(symbol, read) if unit is None else unit)
+        printed = read.unit if unit is None else unit
+        self._unit_of_kind(symbol, read.unit, printed)
         made = GivenSource(data, read, printed, title or data.meaning, source, clause, basis)
         return self._record(Entry(self._open_part(), symbol, GIVEN, made, (), read.value))
 
@@ -184,15 +125,21 @@ class Sheet:
     ) -> Entry:
         """Record a value of a table, with row and source."""
         column = column or symbol
-        number = table.row(row, symbol)[column]
-        unit = table.columns[column]
+        numbers = table.row(row, symbol)
+        if column not in numbers:
+            raise UserError(
+                f"{symbol}: table {table.name!r} has no column {column!r}; "
+                f"it has {', '.join(table.columns)}"
+            )
+        number, unit = numbers[column], unit_named(table.columns[column]).spelling
+        self._check_notation(symbol, unit)
         data = self._symbol(symbol, title)
+        read = read_quantity(symbol, f"{number} {unit}", unit)
         made = LookupSource(
-            data, table.name, row, number, unit, title or data.meaning, table.source,
+            data, table.name, row, read, unit, title or data.meaning, table.source,
             table.clause, table.basis,
         )  # fmt: skip
-        value = read_quantity(symbol, f"{number} {unit}", unit).value
-        return self._record(Entry(self._open_part(), symbol, LOOKUP, made, (), value))
+        return self._record(Entry(self._open_part(), symbol, LOOKUP, made, (), read.value))
 
     def line(
         self,
@@ -209,34 +156,27 @@ class Sheet:
         Names are found in the part, then outside if unique, else by keyword
         (``b=beam.b_f``). A formula given as text has its units proved at once.
         """
-        if formula.__class__ is not Formula or bound:
+        if formula.__class__ is not Formula or bound or unit is not None or symbol:
             return self._general_line(formula, unit, title, system, symbol, bound)
         try:
             args, value = formula.step(self._scope_of_part)
         except KeyError:
             self._bring_in(formula.names)
-            return self.line(formula, unit=unit, title=title, system=system, symbol=symbol)
-        except (ArithmeticError, ValueError) as error:
+            return self.line(formula, title=title)
+        except _NOT_COMPUTED as error:
             raise self._failed(formula, self._arguments(formula.names, {}), error) from None
         # A complex number or an integer has another class; inf - inf and nan - nan are not zero.
         if value.__class__ is not float or value - value != 0.0:
             raise self._failed(formula, args, None)
-        part = self._part
-        name = symbol or formula.symbol
+        part, name = self._part, formula.symbol
         if part is None or name in part.entries:
             self._refuse_place(name)
         extra = {"title": title} if title else None
         made = Entry(part, name, LINE, formula, args, value, extra)  # type: ignore[arg-type]
         part.entries[name] = self._scope_of_part[name] = made  # type: ignore[union-attr]
-        if unit:
-            made.extra = {"title": title, "unit": unit}
         return made
 
-    def _refuse_place(self, name: str) -> None:
-        part = self._open_part()
-        raise UserError(f"{name} stands twice in part {part.key!r}; use another symbol")
-
-    def _general_line(
+    def _general_line(  # noqa: PLR0917 - what `line` was called with, passed on
         self,
         formula: Formula | str,
         unit: str | None,
@@ -249,40 +189,38 @@ class Sheet:
             formula = own_formula(formula, unit, title, system, self.notation)
             prove(formula, self._units(formula.names, bound))
             unit = None
+        if unit is not None:
+            unit = self._unit_of_kind(symbol or formula.symbol, unit, formula.unit)
         args = self._arguments(formula.names, bound)
         try:
             value = formula.function(*[a.value for a in args])
-        except (ArithmeticError, ValueError) as error:
+        except _NOT_COMPUTED as error:
             raise self._failed(formula, args, error) from None
         if not isinstance(value, float) or value - value != 0.0:
             raise self._failed(formula, args, None)
-        extra = {k: v for k, v in (("title", title), ("unit", unit)) if v} or None
-        name = symbol or formula.symbol
-        return self._record(Entry(self._open_part(), name, LINE, formula, args, value, extra))
+        extra: dict[str, Any] = {"title": title} if title else {}
+        if unit is not None:
+            extra["unit"] = unit
+        name = check_id(symbol or formula.symbol)
+        self._check_notation(name, unit or formula.unit)
+        return self._record(
+            Entry(self._open_part(), name, LINE, formula, args, value, extra or None)
+        )
 
-    def _bring_in(self, names: Iterable[str]) -> None:
-        for name in names:
-            if name not in self._scope_of_part:
-                self._scope_of_part[name] = self._find(name)
+    def _unit_of_kind(self, name: str, unit: str, wanted: str) -> str:
+        """Return the spelling of a printed unit of the same kind as ``wanted``."""
+        found, kind = unit_named(unit), unit_named(wanted).kind
+        if found.kind != kind:
+            raise UserError(
+                f"{name}: {unit!r} is a unit of {found.kind}, but a {kind} is printed; "
+                f"write {', '.join(repr(u) for u in units_of_kind(kind)[:6])}"
+            )
+        return found.spelling
 
-    def _arguments(self, names: Iterable[str], bound: Mapping[str, Entry]) -> tuple[Entry, ...]:
-        self._open_part()
-        unknown = [name for name in bound if name not in tuple(names)]
-        if unknown:
-            raise UserError(f"{unknown[0]} is not a name of the formula; it has {', '.join(names)}")
-        args = []
-        for name in names:
-            entry = bound.get(name, self._scope_of_part.get(name))
-            if entry is None:
-                entry = self._find(name)
-            if not isinstance(entry, Entry) or entry.kind not in VALUES:
-                raise UserError(f"{name}: {entry!r} is not a recorded value")
-            args.append(entry)
-        return tuple(args)
-
-    def _units(self, names: Iterable[str], bound: Mapping[str, Entry]) -> dict[str, str]:
-        names = tuple(names)
-        return {n: a.unit for n, a in zip(names, self._arguments(names, bound), strict=True)}
+    def _check_notation(self, name: str, unit: str) -> None:
+        """Hold to one symbol, one unit."""
+        if name in self.notation:
+            self._unit_of_kind(name, unit, self.notation[name].unit)
 
     def _failed(
         self, source: Formula | Criterion, args: tuple[Entry, ...], error: Exception | None
@@ -327,7 +265,7 @@ class Sheet:
         extra = {"exception": exception} if exception else {}
         return self._compare(CHECK, test, key, title, unit, extra, bound)
 
-    def _compare(
+    def _compare(  # noqa: PLR0917 - what `decide` or `check` was called with, passed on
         self,
         kind: str,
         test: Criterion | str,
@@ -338,21 +276,23 @@ class Sheet:
         bound: Mapping[str, Entry],
     ) -> Entry:
         if isinstance(test, str):
-            test = own_criterion(test, unit, title, self.notation, self._units)
+            test = own_criterion(
+                test, unit, title, self.notation, lambda names: self._units(names, bound)
+            )
             prove_criterion(test, self._units(test.names, bound))
         args = self._arguments(test.names, bound)
         sides = self._sides(test, args)
         if title:
             extra = extra | {"title": title}
-        return self._record(
-            Entry(self._open_part(), key or test.key, kind, test, args, sides, extra)
-        )
+        key = key or test.key
+        check_key(key)
+        return self._record(Entry(self._open_part(), key, kind, test, args, sides, extra))
 
     def _sides(self, test: Criterion, args: tuple[Entry, ...]) -> tuple[float, float]:
         values = [a.value for a in args]
         try:
             left, right = (side(*values) for side in test.functions)
-        except (ArithmeticError, ValueError) as error:
+        except _NOT_COMPUTED as error:
             raise self._failed(test, args, error) from None
         if not all(isinstance(v, float) and v - v == 0.0 for v in (left, right)):
             raise self._failed(test, args, None)
@@ -382,7 +322,16 @@ class Sheet:
         args = self._arguments(procedure.names, inner)
         settings = dict(settings or {})
         named = {n: a.value for n, a in zip(procedure.names, args, strict=True)}
-        value = run(procedure, named, settings)
+        try:
+            value = run(procedure, named, settings)
+        except _NOT_COMPUTED as error:
+            raise UserError(f"{symbol}: procedure {procedure.name!r} failed ({error})") from None
+        if not math.isfinite(value):
+            raise UserError(f"{symbol}: procedure {procedure.name!r} found no finite number")
+        unit = unit_named(unit).spelling
+        self._check_notation(symbol, unit)
+        if symbol not in closing.names:
+            raise UserError(f"{symbol}: its closing criterion {closing.text!r} does not name it")
         source = FoundSource(
             self._symbol(symbol, title), procedure, settings, unit, closing, title, clause, basis
         )
@@ -431,7 +380,7 @@ class Sheet:
         return self._show(NOTE, key, ShownSource(title, text, {"text": text}, clause, basis), ())
 
     def _show(self, kind: str, key: str, source: ShownSource, rests_on: Iterable[Entry]) -> Entry:
-        _check_key(key)
+        check_key(key)
         return self._record(Entry(self._open_part(), key, kind, source, tuple(rests_on), None))
 
     def _symbol(self, symbol: str, title: str) -> Symbol:
@@ -455,10 +404,11 @@ class Sheet:
             for key, call in self.expected.items()
             if key not in self._parts
         ]
-        faults += self._out_of_date()
+        faults += out_of_date(self._parts, self.expected)
         if faults:
             raise UserError(f"{self.calc['id']}: {fault}" for fault in faults)
-        return Record(self.view(self._parts.values()))
+        # Read as any other record: what could not be read back is refused here.
+        return Record.from_data(self.view(in_order(self._parts)))
 
     def view(self, parts: Iterable[Part]) -> dict[str, Any]:
         """Return the record data of some parts, without the checks of :meth:`close`."""
@@ -467,30 +417,9 @@ class Sheet:
             notation=self.notation, scope=self.scope, not_covered=self.not_covered,
         )  # fmt: skip
 
-    def _out_of_date(self) -> list[str]:
-        stale: dict[str, list[str]] = {}
-        for part in self._parts.values():
-            for entry in part.entries.values():
-                for arg in entry.args:
-                    if self._is_replaced(arg):
-                        stale.setdefault(part.key, []).append(arg.id)
-        return [
-            f"part {key!r} rests on {', '.join(dict.fromkeys(ids))}, which has changed since; "
-            f"run {self.expected.get(key, 'it')} again"
-            for key, ids in stale.items()
-        ]
-
-    def _is_replaced(self, arg: Entry) -> bool:
-        part = self._parts.get(arg.part.key)
-        current = part.entries.get(arg.symbol) if part is not None else None
-        # Run again with nothing changed, an entry has the same digest: nothing is out of date.
-        return current is not arg and (current is None or current.digest != arg.digest)
-
 
 def _typed_unit(symbol: str, typed: object) -> str:
     """Take the unit from the text itself, for a symbol that no notation knows."""
-    from lineproof.quantity.units import UNITS, plain_spelling  # noqa: PLC0415 - border only
-
     if isinstance(typed, str):
         tail = plain_spelling(typed.strip().lstrip("+-0123456789.eE"))
         if tail in UNITS:
@@ -498,9 +427,3 @@ def _typed_unit(symbol: str, typed: object) -> str:
     if isinstance(typed, str | int | float):
         return ""
     raise UserError(f"{symbol}: name the unit to print it in: unit='mm'")
-
-
-def _check_key(key: str) -> None:
-    plain = key.replace("-", "").replace("_", "")
-    if not (plain.isascii() and plain.isalnum() and len(key) <= 60 and key[0].isalnum()):  # noqa: PLR2004
-        raise UserError(f"key {key[:60]!r}: use letters, digits and hyphens, such as 'flexure-2'")

@@ -26,7 +26,7 @@ class LookupTable:
     basis: str = ""
 
     def row(self, key: object, what: str) -> Mapping[str, str]:
-        """Return a row; raises :class:`UserError` that names input ``what`` and the rows there are."""
+        """Return a row; raises :class:`UserError` that names ``what`` and the rows."""
         found = self.rows.get(key) if isinstance(key, str) else None
         if found is None:
             near = difflib.get_close_matches(str(key)[:20], self.rows, n=1)

@@ -19,6 +19,7 @@ from lineproof.typeset.nodes import (
     Thin,
     Unit,
     Word,
+    prime_beside,
 )
 from lineproof.typeset.values import grouped, unit_text
 
@@ -47,8 +48,8 @@ def _write(math: Math) -> str:
             return f"<msqrt>{_write(of)}</msqrt>"
         case Root(of, index):
             return f"<mroot>{_write(of)}<mn>{_text(index)}</mn></mroot>"
-        case Scripts(base, sub, sup):
-            return _scripts(base, sub, sup)
+        case Scripts():
+            return _scripts(prime_beside(math))
         case Fence(of, left, right):
             return (
                 f'<mrow><mo stretchy="true" form="prefix">{_text(left)}</mo>{_write(of)}'
@@ -76,7 +77,7 @@ def _write_token(math: Math) -> str:
         case Unit(text):
             return f"{_THIN}<mtext>{_text(unit_text(text))}</mtext>"
         case Prime():
-            return "<mo>′</mo>"
+            return '<mo lspace="0" rspace="0">′</mo>'
     msg = f"{math!r} is no node"
     raise TypeError(msg)
 
@@ -91,9 +92,12 @@ def _sign(text: str, role: str) -> str:
     return f"<mo>{_text(text)}</mo>"
 
 
-def _scripts(base: Math, sub: Math | None, sup: Math | None) -> str:
-    if sub is not None and sup is not None:
-        return f"<msubsup>{_write(base)}{_write(sub)}{_write(sup)}</msubsup>"
-    if sub is not None:
-        return f"<msub>{_write(base)}{_write(sub)}</msub>"
-    return f"<msup>{_write(base)}{_write(sup or Row(()))}</msup>"
+def _scripts(math: Scripts) -> str:
+    base = _write(math.base)
+    below = "" if math.sub is None else _write(math.sub)
+    above = "" if math.sup is None else _write(math.sup)
+    if below and above:
+        return f"<msubsup>{base}{below}{above}</msubsup>"
+    if below:
+        return f"<msub>{base}{below}</msub>"
+    return f"<msup>{base}{above}</msup>" if above else base

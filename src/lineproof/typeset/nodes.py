@@ -131,6 +131,16 @@ def row(items: Iterable[Math]) -> Math:
     return flat[0] if len(flat) == 1 else Row(tuple(flat))
 
 
+def prime_beside(scripts: Scripts) -> Scripts:
+    """Set primes beside the base instead of above its subscript.
+
+    The fonts' prime is drawn raised already; as a superscript it would shrink to a speck.
+    """
+    if scripts.sup is None or not all(isinstance(m, Prime) for m in items_of(scripts.sup)):
+        return scripts
+    return Scripts(row([scripts.base, scripts.sup]), scripts.sub)
+
+
 def items_of(math: Math) -> tuple[Math, ...]:
     """Return the nodes of a row, or the node itself as the only one."""
     return math.items if isinstance(math, Row) else (math,)

@@ -136,7 +136,7 @@ def _meaning(entry: Entry, notation: Notation) -> str:
 
 def _sentence_case(title: str) -> str:
     """Begin a title with a capital, unless it begins with a symbol or a mark ("d", "10M")."""
-    first = title.partition(" ")[0]
+    first = title.partition(" ")[0].rstrip(",:;")
     return title[0].upper() + title[1:] if first.isalpha() and len(first) > 1 else title
 
 

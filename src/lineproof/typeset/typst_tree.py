@@ -20,6 +20,7 @@ from lineproof.typeset.nodes import (
     Thin,
     Unit,
     Word,
+    prime_beside,
 )
 from lineproof.typeset.values import grouped, unit_text
 
@@ -35,12 +36,13 @@ def typst_tree(math: Math) -> TypstTree:
             return ["frac", typst_tree(top), typst_tree(bottom)]
         case Root(of, index):
             return ["root", index, typst_tree(of)]
-        case Scripts(base, sub, sup):
+        case Scripts():
+            beside = prime_beside(math)
             return [
                 "scripts",
-                typst_tree(base),
-                None if sub is None else typst_tree(sub),
-                None if sup is None else typst_tree(sup),
+                typst_tree(beside.base),
+                None if beside.sub is None else typst_tree(beside.sub),
+                None if beside.sup is None else typst_tree(beside.sup),
             ]
         case Fence(of, left, right):
             return ["fence", left, typst_tree(of), right]

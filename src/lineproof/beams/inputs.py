@@ -1,0 +1,241 @@
+"""The inputs of a floor beam: read and checked at the border, all faults at once."""
+
+from __future__ import annotations
+
+import difflib
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
+from typing import Any, Literal
+
+from lineproof.beams.bars import BarLayers, read_bars
+from lineproof.errors import FaultList, UserError
+from lineproof.quantity import QuantityInput, Typed, echo, read_quantity
+from lineproof.sheet import LookupTable
+from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
+from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_COVER, FIRE_SLAB
+from lineproof.standards.a23_3.materials import DENSITY_FACTORS, LEAST_F_C, MOST_F_C
+from lineproof.standards.nbc.loads import USES
+
+Shape = Literal["T", "L", "rectangular"]
+SHAPES = ("T", "L", "rectangular")
+ENDS = ("free", "cast with a girder", "cast with a column")
+MINIMUM_RULES = ("10.5.1.1", "10.5.1.2")
+
+
+@dataclass(frozen=True, slots=True)
+class Range:
+    """The unit in which an input is printed and the range the method covers, in that unit."""
+
+    unit: str
+    low: float
+    high: float
+    zero: bool = False
+
+
+RANGES: Mapping[str, Range] = {
+    "span": Range("m", 1, 40),
+    "spacing": Range("m", 0.3, 20),
+    "tributary_width": Range("m", 0.1, 20),
+    "b_w": Range("mm", 100, 2000),
+    "h": Range("mm", 150, 3000),
+    "h_f": Range("mm", 40, 1000),
+    "b_f": Range("mm", 100, 20000),
+    "d": Range("mm", 60, 3000),
+    "f_c": Range("MPa", LEAST_F_C, MOST_F_C),
+    "gamma_c": Range("kg/m3", 1500, 2500),
+    "superimposed": Range("kPa", 0, 100, zero=True),
+    "live_load": Range("kPa", 0.1, 100),
+    "cover": Range("mm", 10, 200),
+    "aggregate": Range("mm", 5, 40),
+    "fire_rating": Range("h", 0.5, 4),
+    "M_f": Range("kN.m", 0, 1e6, zero=True),
+}
+_OUTSIDE = {"f_c": " (A23.3, 8.6.1.1)"}
+
+
+def read_input(name: str, given: QuantityInput) -> Typed:
+    """Read one quantity of :data:`RANGES`; raises :class:`UserError` that names the input."""
+    allowed = RANGES[name]
+    typed = read_quantity(name, given, allowed.unit)
+    value = read_quantity(name, given, allowed.unit).value
+    low, high = (read_quantity(name, f"{x} {allowed.unit}", allowed.unit).value
+                 for x in (_plain(allowed.low), _plain(allowed.high)))
+    if value < 0 or (value == 0 and not allowed.zero):
+        what = "negative" if value < 0 else "zero"
+        raise UserError(
+            f"{name}: {echo(given)} is {what}; write a positive value such as "
+            f"'{_plain(allowed.high / 4)} {allowed.unit}'"
+        )
+    if not low <= value <= high:
+        raise UserError(
+            f"{name}: {echo(given)} is outside {_plain(allowed.low)} to {_plain(allowed.high)} "
+            f"{allowed.unit}{_OUTSIDE.get(name, ', the range of the method')}; "
+            "write a value inside it"
+        )
+    return typed
+
+
+def _plain(number: float) -> str:
+    return f"{number:g}" if abs(number) < 1e6 else f"{number:.0f}"  # noqa: PLR2004
+
+
+def one_of(name: str, given: object, allowed: tuple[str, ...]) -> str:
+    """Return ``given`` if it is one of the words allowed."""
+    if given not in allowed:
+        words = ", ".join(repr(word) for word in allowed)
+        raise UserError(f"{name}: {echo(given)} is not known; write one of {words}")
+    return str(given)
+
+
+def row_of(name: str, given: object, table: LookupTable) -> str:
+    """Return ``given`` if it is a row of the table."""
+    table.row(given, name)
+    return str(given)
+
+
+@dataclass(frozen=True)
+class FloorBeamInputs:
+    """Checked inputs of one simply supported floor beam."""
+
+    shape: Shape
+    span: Typed
+    spacing: Typed
+    tributary_width: Typed
+    b_w: Typed
+    h: Typed
+    h_f: Typed | None
+    f_c: Typed
+    gamma_c: Typed
+    density: str
+    grade: str
+    superimposed: Typed
+    use: str
+    live_load: Typed | None
+    exposure: str
+    cover: Typed
+    aggregate: Typed
+    fire_rating: str
+    fire_aggregate: str
+    stirrup: str
+    bottom_bars: BarLayers | None
+    compression_bars: BarLayers | None
+    top_bars: BarLayers | None
+    ends: str
+    minimum_rule: str
+
+    @property
+    def slab(self) -> bool:
+        """Whether the beam has a flange."""
+        return self.h_f is not None
+
+
+class _Reader:
+    """Reads inputs one by one and keeps every fault."""
+
+    def __init__(self, given: Mapping[str, Any]) -> None:
+        self.given, self.faults = given, FaultList()
+
+    def take(self, name: str, read: Callable[..., Any], *more: object) -> Any:
+        try:
+            return read(name, self.given[name], *more)
+        except UserError as error:
+            self.faults.take(error)
+            return None
+
+    def take_if_given(self, name: str, read: Callable[..., Any], *more: object) -> Any:
+        return None if self.given[name] is None else self.take(name, read, *more)
+
+
+def read_floor_beam(given: Mapping[str, Any]) -> FloorBeamInputs:
+    """Read and check all inputs; raises one :class:`UserError` with every fault."""
+    reader = _Reader(given)
+    take = reader.take
+    shape = take("shape", one_of, SHAPES)
+    fields = {
+        "shape": shape,
+        **{
+            name: take(name, read_input)
+            for name in ("span", "spacing", "b_w", "h", "f_c", "gamma_c", "superimposed",
+                         "cover", "aggregate")
+        },
+        **{
+            name: reader.take_if_given(name, read_input)
+            for name in ("h_f", "live_load", "tributary_width")
+        },
+        "density": take("density", row_of, DENSITY_FACTORS),
+        "grade": take("grade", row_of, GRADES),
+        "use": take("use", row_of, USES),
+        "exposure": take("exposure", row_of, EXPOSURES),
+        "fire_rating": take("fire_rating", _fire_rating),
+        "fire_aggregate": take("fire_aggregate", one_of, tuple(FIRE_SLAB.columns)),
+        "stirrup": take("stirrup", row_of, STIRRUP_BENDS),
+        **{
+            name: reader.take_if_given(name, read_bars)
+            for name in ("bottom_bars", "compression_bars", "top_bars")
+        },
+        "ends": take("ends", one_of, ENDS),
+        "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
+    }  # fmt: skip
+    take("web_openings", _no_openings)
+    _check_flange(fields, given, reader.faults)
+    _check_geometry(fields, given, reader.faults)
+    reader.faults.raise_if_any()
+    if fields["tributary_width"] is None:
+        fields["tributary_width"] = fields["spacing"]
+    return FloorBeamInputs(**fields)
+
+
+def _fire_rating(name: str, given: QuantityInput) -> str:
+    hours = read_input(name, given).value
+    for row in FIRE_COVER.rows:
+        if abs(float(row.split()[0]) - hours) < 1e-9:  # noqa: PLR2004 - 45 min is 0.75 h
+            return row
+    raise UserError(f"{name}: {echo(given)} is not in the table; write one of {', '.join(FIRE_COVER.rows)}")
+
+
+def _no_openings(name: str, given: object) -> None:
+    if given not in (None, "none", "", 0, False):
+        raise UserError(
+            f"{name}: {echo(given)}: a beam with web openings is outside the method; write 'none' "
+            "and design the opening region by strut-and-tie"
+        )
+
+
+def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    shape, h_f = fields["shape"], fields["h_f"]
+    if shape in ("T", "L") and given["h_f"] is None:
+        faults.add(f"h_f: a beam of shape {shape!r} needs its slab; write '140 mm'")
+    if shape == "rectangular" and given["h_f"] is not None:
+        faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
+    if shape == "L" and given["tributary_width"] is None:
+        faults.add("tributary_width: an edge beam needs it; write for example '1.7 m'")
+    cover = fields["cover"]
+    if h_f is not None and cover is not None and h_f.value <= cover.value:
+        faults.add(
+            f"h_f: {echo(given['h_f'])} is not thicker than its cover of {echo(given['cover'])}; "
+            "write a thicker slab"
+        )
+
+
+def _check_geometry(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    h, h_f, b_w = fields["h"], fields["h_f"], fields["b_w"]
+    if h is not None and h_f is not None and h_f.value >= h.value:
+        faults.add(f"h_f: {echo(given['h_f'])} is not less than h of {echo(given['h'])}; write a deeper beam")
+    spacing, span = fields["spacing"], fields["span"]
+    if fields["shape"] != "rectangular" and spacing is not None and b_w is not None:
+        if spacing.value <= b_w.value:
+            faults.add(
+                f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
+                "write the distance between the centres of the beams"
+            )
+    if span is not None and h is not None and span.value < 2 * h.value:
+        faults.add(
+            f"span: {echo(given['span'])} is less than twice h of {echo(given['h'])}: a deep beam "
+            "is outside the method; use strut-and-tie (A23.3, 10.7)"
+        )
+
+
+def nearest(word: str, words: list[str]) -> str:
+    """Return ', did you mean ...' for a near miss, else nothing."""
+    close = difflib.get_close_matches(word, words, n=1)
+    return f"; did you mean {close[0]!r}?" if close else ""

@@ -1,0 +1,56 @@
+"""Effective flange, gross section, cracking moments."""
+
+from __future__ import annotations
+
+from typing import Literal
+
+from lineproof.beams.inputs import Shape
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import flange
+
+SECTION = "section"
+
+
+def record_section(sheet: Sheet, shape: Shape) -> None:
+    """Record the effective width, the gross properties and both cracking moments."""
+    with sheet.part(SECTION, "Effective flange and gross section"):
+        if shape != "rectangular":
+            _record_flange(sheet, shape)
+        record_gross(sheet, shape)
+
+
+def _record_flange(sheet: Sheet, shape: Literal["T", "L"]) -> None:
+    sheet.line(flange.CLEAR_DISTANCE)
+    if shape == "T":
+        sheet.line(flange.OVERHANG_T_SIMPLE)
+        sheet.line(flange.WIDTH_T)
+    else:
+        sheet.line(flange.OVERHANG_L)
+        sheet.line(flange.WIDTH_L)
+
+
+def record_gross(sheet: Sheet, shape: Shape) -> None:
+    """Record gross area, centroid, inertia and cracking moments inside the open part."""
+    if shape == "rectangular":
+        lines = (flange.AREA_RECTANGLE, flange.CENTROID_RECTANGLE, flange.INERTIA_RECTANGLE)
+    else:
+        lines = (flange.AREA_TEE, flange.CENTROID_TEE, flange.INERTIA_TEE)
+    for line in (*lines, flange.CENTROID_TOP, flange.CRACKING_BOTTOM, flange.CRACKING_TOP):
+        sheet.line(line)
+
+
+def compression_zone(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
+    """Return what b, b_w and h_f stand for with compression at the top.
+
+    A rectangle is its own flange: b is the web width and h_f the whole depth.
+    """
+    b_w = sheet.find("b_w")
+    if shape == "rectangular":
+        return {"b": b_w, "b_w": b_w, "h_f": sheet.find("h")}
+    return {"b": sheet.find("b_f"), "b_w": b_w, "h_f": sheet.find("h_f")}
+
+
+def only(bound: dict[str, Entry], names: tuple[str, ...]) -> dict[str, Entry]:
+    """Return the bindings that a formula has names for."""
+    return {name: entry for name, entry in bound.items() if name in names}

@@ -1,0 +1,110 @@
+"""``lineproof issue``: from notebooks to the printed package."""
+
+from __future__ import annotations
+
+import argparse
+import sys
+from collections.abc import Sequence
+from dataclasses import replace
+from pathlib import Path
+
+from lineproof.cli.files import write_all
+from lineproof.cli.progress import Progress
+from lineproof.cli.rerun import Rerun, failed_checks, load_all, report_changes, rerun_all
+from lineproof.errors import FaultList, UserError
+from lineproof.package.facts import PAPERS
+
+DEFAULT_FOLDER = "issued"
+PACKAGE_NAME = "package"
+
+
+def run(options: argparse.Namespace) -> int:
+    """Issue the package; returns 1 when a check in it does not hold."""
+    progress = Progress()
+    found = load_all(options.notebooks, need_record=not options.update)
+    folder = options.into or options.notebooks[0].parent / DEFAULT_FOLDER
+    _check_names([stored.path for stored in found], folder)
+    reruns = rerun_all(found, progress)
+    _refuse_changes(reruns)
+    _check_project(reruns)
+    progress.step(f"printing {folder}")
+    files = _files(reruns, folder, options.paper)
+    if options.update:
+        files |= {rerun.path: rerun.text.encode() for rerun in reruns}
+    write_all(files)
+    return _report(reruns, files)
+
+
+def _check_names(paths: Sequence[Path], folder: Path) -> None:
+    """Refuse, before anything is run, what could not be written at the end."""
+    stems = [path.stem for path in paths]
+    twice = sorted({stem for stem in stems if stems.count(stem) > 1})
+    if twice:
+        raise UserError(f"two notebooks are called {twice[0]!r}; issue them into two folders")
+    if folder.exists() and not folder.is_dir():
+        raise UserError(f"{folder}: is a file, not a folder; choose another with --into")
+
+
+def _refuse_changes(reruns: Sequence[Rerun]) -> None:
+    faults = FaultList()
+    for rerun in reruns:
+        if rerun.changes:
+            for fault in report_changes(rerun):
+                faults.add(fault)
+    if faults.faults:
+        faults.add(
+            "nothing has been issued; run all cells and save, or store the new values with --update"
+        )
+    faults.raise_if_any()
+
+
+def _check_project(reruns: Sequence[Rerun]) -> None:
+    """One package has one project, and no two calcs of one id."""
+    first = reruns[0]
+    faults = FaultList()
+    seen: dict[str, Path] = {}
+    for rerun in reruns:
+        record = rerun.calc.record
+        if record.data["project"] != first.calc.record.data["project"]:
+            faults.add(f"{rerun.path}: not of the project of {first.path}; issue it by itself")
+        if record.calc_id in seen:
+            faults.add(
+                f"{rerun.path}: its calc id {record.calc_id!r} is that of {seen[record.calc_id]}; "
+                "give each calc its own"
+            )
+        seen[record.calc_id] = rerun.path
+    faults.raise_if_any()
+
+
+def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Path, bytes]:
+    from lineproof.package import build_package, to_html, to_pdf  # noqa: PLC0415 - 0.1 s
+
+    package = build_package(
+        [rerun.calc.record for rerun in reruns], [rerun.calc.walk for rerun in reruns]
+    )
+    if paper is not None:
+        package = replace(package, facts=replace(package.facts, paper=PAPERS[paper]))
+    name = reruns[0].path.stem if len(reruns) == 1 else PACKAGE_NAME
+    printed = {
+        folder / f"{name}.pdf": to_pdf(package),
+        folder / f"{name}.html": to_html(package).encode(),
+    }
+    for rerun in reruns:
+        printed[folder / f"{rerun.path.stem}.json"] = f"{rerun.calc.record.to_text()}\n".encode()
+    return printed
+
+
+def _report(reruns: Sequence[Rerun], files: dict[Path, bytes]) -> int:
+    failed = [sentence for rerun in reruns for sentence in failed_checks(rerun.calc.record)]
+    for rerun in reruns:
+        for remark in rerun.calc.remarks:
+            sys.stderr.write(f"{remark}\n")
+    for path in files:
+        sys.stdout.write(f"{path}\n")
+    for rerun in reruns:
+        record = rerun.calc.record
+        scope = record.data["status"].get("scope")
+        sys.stdout.write(f"{record!r}{f'; {scope}' if scope else ''}\n")
+    for sentence in failed:
+        sys.stdout.write(f"{sentence}\n")
+    return 1 if failed else 0

@@ -1,0 +1,118 @@
+"""Re-executing stored calcs and comparing them: what ``issue`` and ``recheck`` share."""
+
+from __future__ import annotations
+
+import json
+from collections.abc import Iterable
+from dataclasses import dataclass
+from pathlib import Path
+from typing import Any
+
+from lineproof.cli.progress import Progress
+from lineproof.errors import FaultList, UserError
+from lineproof.notebook.cells import Cell, cells_of, load_notebook
+from lineproof.notebook.compare import Change, compare
+from lineproof.notebook.execute import execute
+from lineproof.notebook.read import (
+    Calc,
+    calc_of,
+    changed_cells,
+    check_parameters,
+    has_outputs,
+)
+from lineproof.record import Record
+
+
+@dataclass(frozen=True, slots=True)
+class Stored:
+    """A notebook as it lies on the disk; ``record`` is None when it has never been run."""
+
+    path: Path
+    data: dict[str, Any]
+    cells: tuple[Cell, ...]
+    record: Record | None
+
+
+@dataclass(frozen=True, slots=True)
+class Rerun:
+    """A stored notebook and what a fresh run of it gives."""
+
+    stored: Stored
+    text: str
+    calc: Calc
+    changes: tuple[Change, ...]
+
+    @property
+    def path(self) -> Path:
+        """The notebook's path."""
+        return self.stored.path
+
+
+def load_all(paths: Iterable[Path], *, need_record: bool = True) -> list[Stored]:
+    """Read all notebooks; raises :class:`UserError` with the faults of all.
+
+    Without ``need_record`` it does not matter what an earlier run has left in them.
+    """
+    faults, found = FaultList(), []
+    for path in dict.fromkeys(paths):
+        try:
+            found.append(_load(path, need_record=need_record))
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+    return found
+
+
+def _load(path: Path, *, need_record: bool) -> Stored:
+    data = load_notebook(path)
+    cells = cells_of(data, str(path))
+    check_parameters(cells, str(path))
+    record = None
+    if has_outputs(cells) and need_record:
+        record = calc_of(data, str(path), fresh=False).record
+    return Stored(path, data, cells, record)
+
+
+def rerun_all(found: Iterable[Stored], progress: Progress) -> list[Rerun]:
+    """Execute all notebooks; raises :class:`UserError` with the faults of all."""
+    faults, made = FaultList(), []
+    for stored in found:
+        progress.step(f"running {stored.path}")
+        try:
+            made.append(_rerun(stored, progress))
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+    return made
+
+
+def _rerun(stored: Stored, progress: Progress) -> Rerun:
+    name = str(stored.path)
+    text = execute(stored.data, name, stored.path.resolve().parent, progress.count)
+    calc = calc_of(json.loads(text), name)
+    changes = compare(stored.record, calc.record) if stored.record is not None else []
+    return Rerun(stored, text, calc, tuple(changes))
+
+
+def report_changes(rerun: Rerun) -> list[str]:
+    """Return what differs, as sentences; cells edited after their run come first."""
+    name = rerun.path
+    edited = changed_cells(rerun.stored.cells)
+    count = len({change.id for change in rerun.changes})
+    return [
+        *(f"{name}: {cell.name} was changed after it was run" for cell in edited),
+        f"{name}: {count} {'line differs' if count == 1 else 'lines differ'} from a re-run",
+        *(f"  {change}" for change in rerun.changes),
+    ]
+
+
+def failed_checks(record: Record) -> list[str]:
+    """Return a sentence per check that does not hold."""
+    sentences = []
+    for entry_id in record.failed:
+        entry = record.entries[entry_id]
+        accepted = entry.get("exception")
+        note = f" (accepted by {accepted['initials']})" if accepted else ""
+        title = f", {entry['title']}" if entry["title"] else ""
+        sentences.append(f"{record.calc_id}: check {entry_id}{title} does not hold{note}")
+    return sentences

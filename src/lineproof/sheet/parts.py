@@ -1,0 +1,140 @@
+"""The parts of a calculation being made: opening, finding entries by name, running again."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Mapping
+from contextlib import contextmanager
+from typing import Any
+
+from lineproof.errors import UserError
+from lineproof.record import Entry, Part
+from lineproof.record.entry import VALUES
+
+
+class Parts:
+    """Parts by key, the one that is open, and the entries its names stand for.
+
+    ``expected`` names the calls that make the parts a calculation must have, by key.
+    """
+
+    def __init__(self) -> None:
+        self.expected: dict[str, str] = {}
+        self._parts: dict[str, Part] = {}
+        self._stopped: dict[str, str] = {}
+        self._part: Part | None = None
+        self._scope_of_part: dict[str, Any] = {}
+
+    def _show_part(self, key: str) -> None:
+        """Show the part that has just closed."""
+
+    @contextmanager
+    def part(self, key: str, title: str) -> Iterator[Part]:
+        """Open a part; an existing key is replaced in place. Parts do not nest."""
+        if self._part is not None:
+            msg = f"part {key!r} opened inside part {self._part.key!r}; close that one first"
+            raise UserError(msg)
+        check_key(key)
+        part = Part(key, title)
+        before = self._parts.get(key)
+        self._parts[key] = part
+        self._part, self._scope_of_part = part, {}
+        try:
+            yield part
+        except BaseException:
+            self._stopped[key] = title
+            raise
+        finally:
+            self._part = None
+            if before is not None:
+                before.replaced = True
+        self._stopped.pop(key, None)
+        self._show_part(key)
+
+    @property
+    def parts(self) -> tuple[Part, ...]:
+        """The parts recorded so far, in order."""
+        return tuple(self._parts.values())
+
+    def adopt(self, parts: Iterable[Part]) -> None:
+        """Take over recorded parts as they are."""
+        self._parts.update((part.key, part) for part in parts)
+
+    def find(self, name: str) -> Entry:
+        """Return the entry a name stands for: in the open part, else outside if unique."""
+        found: Entry | None = self._scope_of_part.get(name) if self._part is not None else None
+        return self._find(name) if found is None else found
+
+    def entry(self, entry_id: str) -> Entry:
+        """Return a recorded entry by its id ``part-key/symbol``."""
+        key, _, symbol = entry_id.partition("/")
+        part = self._parts.get(key)
+        if part is None or symbol not in part.entries:
+            raise UserError(f"{entry_id!r} is not recorded{self._run_first(key)}")
+        return part.entries[symbol]
+
+    def _run_first(self, key: str) -> str:
+        call = self.expected.get(key)
+        return f"; run {call} first" if call else ""
+
+    def _open_part(self) -> Part:
+        if self._part is None:
+            raise UserError("nothing can be recorded outside a part; write 'with sheet.part(...):'")
+        return self._part
+
+    def _find(self, name: str) -> Entry:
+        hits = [part.entries[name] for part in self._parts.values() if name in part.entries]
+        values = [entry for entry in hits if entry.kind in VALUES]
+        if len(values) == 1:
+            return values[0]
+        if values:
+            places = ", ".join(entry.id for entry in values)
+            raise UserError(
+                f"{name} stands in {places}; say which: {name}=sheet.entry({values[0].id!r})"
+            )
+        waiting = [call for key, call in self.expected.items() if key not in self._parts]
+        hint = f" (not run yet: {', '.join(waiting)})" if waiting else ""
+        raise UserError(f"{name} is not recorded{hint}; give it first, or name it {name}=...")
+
+    def _record(self, entry: Entry) -> Entry:
+        part = self._open_part()
+        if entry.symbol in part.entries:
+            raise UserError(f"{entry.symbol} stands twice in part {part.key!r}; use another symbol")
+        part.entries[entry.symbol] = entry
+        if entry.kind in VALUES:
+            self._scope_of_part[entry.symbol] = entry
+        return entry
+
+    def _refuse_place(self, name: str) -> None:
+        part = self._open_part()
+        raise UserError(f"{name} stands twice in part {part.key!r}; use another symbol")
+
+    def _bring_in(self, names: Iterable[str]) -> None:
+        for name in names:
+            if name not in self._scope_of_part:
+                self._scope_of_part[name] = self._find(name)
+
+    def _arguments(self, names: Iterable[str], bound: Mapping[str, Entry]) -> tuple[Entry, ...]:
+        self._open_part()
+        unknown = [name for name in bound if name not in tuple(names)]
+        if unknown:
+            raise UserError(f"{unknown[0]} is not a name of the formula; it has {', '.join(names)}")
+        args = []
+        for name in names:
+            entry = bound.get(name, self._scope_of_part.get(name))
+            if entry is None:
+                entry = self._find(name)
+            if not isinstance(entry, Entry) or entry.kind not in VALUES:
+                raise UserError(f"{name}: {entry!r} is not a recorded value")
+            args.append(entry)
+        return tuple(args)
+
+    def _units(self, names: Iterable[str], bound: Mapping[str, Entry]) -> dict[str, str]:
+        names = tuple(names)
+        return {n: a.unit for n, a in zip(names, self._arguments(names, bound), strict=True)}
+
+
+def check_key(key: str) -> None:
+    """Refuse a key that cannot stand in an id."""
+    plain = key.replace("-", "").replace("_", "")
+    if not (plain.isascii() and plain.isalnum() and len(key) <= 60 and key[0].isalnum()):  # noqa: PLR2004
+        raise UserError(f"key {key[:60]!r}: use letters, digits and hyphens, such as 'flexure-2'")
