@@ -11,6 +11,7 @@ import typst
 from lineproof.beams.figures import (
     BarRow,
     Force,
+    MomentLevel,
     SectionShape,
     StressState,
     UniformLoad,
@@ -109,10 +110,10 @@ def capacity(ratio: float = 0.19, factored: float = 0.9, last: float = 1.0) -> F
         [curve_point(last * number / 50) for number in range(51)],
         chosen,
         (*words("5-25M, "), *named(symbol("M", "r"), "748 kN·m")),
-        factored=factored * chosen[1],
-        factored_label=named(symbol("M", "f"), "700 kN·m"),
-        cracking=0.2 * chosen[1],
-        cracking_label=named(symbol("M", "cr"), "212 kN·m"),
+        [
+            MomentLevel(factored * chosen[1], named(symbol("M", "f"), "700 kN·m"), "M_f", "long"),
+            MomentLevel(0.2 * chosen[1], named(symbol("M", "cr"), "212 kN·m"), "M_cr", "dotted"),
+        ],
     )
 
 

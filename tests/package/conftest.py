@@ -7,13 +7,8 @@ from typing import Any
 
 import pytest
 
-from lineproof.beams.figures import (
-    BarRow,
-    SectionShape,
-    UniformLoad,
-    loading_figure,
-    section_figure,
-)
+from lineproof.beams.figure_loading import UniformLoad, loading_figure
+from lineproof.beams.figure_section import BarRow, SectionShape, section_figure
 from lineproof.drawing import to_json
 from lineproof.formula import Notation, Symbol, criterion, formula
 from lineproof.record import Procedure
@@ -109,7 +104,10 @@ def _neutral_axis() -> Procedure:
     if known is not None:
         return known
     register = procedure(
-        "tests.neutral-axis", 1, "equilibrium of the section by bisection", ("A_s", "f_y", "b", "f_c")
+        "tests.neutral-axis",
+        1,
+        "equilibrium of the section by bisection",
+        ("A_s", "f_y", "b", "f_c"),
     )
     return register(lambda A_s, f_y, b, f_c: 0.85 * A_s * f_y / (0.802 * 0.65 * f_c * b * 0.89))
 
@@ -117,7 +115,11 @@ def _neutral_axis() -> Procedure:
 def made_sheet(*, d_bars: int = 4, accepted: bool = False) -> Sheet:
     """Return the sheet of beam B7; with two bars its resistance does not suffice."""
     sheet = Sheet("B7", "Gallery floor beam B7", project=PROJECT, notation=NOTATION)
-    sheet.codes = {"pair": "NBC 2015 + A23.3-14", "building": "NBC 2015", "concrete": "CSA A23.3-14"}
+    sheet.codes = {
+        "pair": "NBC 2015 + A23.3-14",
+        "building": "NBC 2015",
+        "concrete": "CSA A23.3-14",
+    }
     sheet.member = "floor beam, one simple span"
     sheet.scope = "preliminary: flexure only"
     sheet.not_covered = [
@@ -179,7 +181,10 @@ def _loads(sheet: Sheet) -> None:
         load("M_f = w_f*L**2/8", "Factored moment at midspan")
         drawn = loading_figure(
             7600,
-            [UniformLoad("dead load", 24.1, "24.1 kN/m"), UniformLoad("live load", 14.9, "14.9 kN/m")],
+            [
+                UniformLoad("dead load", 24.1, "24.1 kN/m"),
+                UniformLoad("live load", 14.9, "14.9 kN/m"),
+            ],
         )
         sheet.figure(
             "loading", to_json(drawn), title="Loading of beam B7", alt="Simple span of 7.6 m, loads"
@@ -227,11 +232,14 @@ def _flexure(sheet: Sheet, *, accepted: bool) -> None:
                 no="The stress block reaches into the web.", notation=NOTATION,
             )
         )  # fmt: skip
-        sheet.line(formula("c = a/beta_1", clause="10.1.7", title="Neutral axis", notation=NOTATION))
+        sheet.line(
+            formula("c = a/beta_1", clause="10.1.7", title="Neutral axis", notation=NOTATION)
+        )
         sheet.check(
             criterion(
                 "c/d <= 700/(700 + f_y)", unit="", clause="10.5.2", title="Steel yields first",
-                key="yields", numbers={"700": "MPa"}, yes="The steel yields before the concrete fails.",
+                key="yields", numbers={"700": "MPa"},
+                yes="The steel yields before the concrete fails.",
                 no="The concrete would fail before the steel yields.", notation=NOTATION,
             )
         )  # fmt: skip
@@ -251,7 +259,8 @@ def _flexure(sheet: Sheet, *, accepted: bool) -> None:
             initials="A.V." if accepted else "",
         )  # fmt: skip
         sheet.found(
-            "c_n", _neutral_axis(), criterion("abs(c_n - c) <= 0.05*c", unit="mm", notation=NOTATION),
+            "c_n", _neutral_axis(),
+            criterion("abs(c_n - c) <= 0.05*c", unit="mm", notation=NOTATION),
             unit="mm", title="Neutral axis by a second path",
         )  # fmt: skip
 
@@ -287,25 +296,23 @@ def _crack(sheet: Sheet) -> None:
 
 @pytest.fixture(scope="session")
 def whole_record() -> dict[str, Any]:
-    """The plain data of a beam whose checks hold."""
+    """Return the data of a beam whose checks hold."""
     return made_sheet(d_bars=6).close().data
 
 
 @pytest.fixture
 def record(whole_record: dict[str, Any]) -> dict[str, Any]:
-    """A copy to change at will."""
+    """Return a copy to change at will."""
     return copy.deepcopy(whole_record)
 
 
 @pytest.fixture(scope="session")
 def failing_record() -> dict[str, Any]:
-    """The plain data of a beam whose moment check fails."""
+    """Return the data of a beam whose moment check fails."""
     return made_sheet(d_bars=2).close().data
 
 
 @pytest.fixture(scope="session")
 def accepted_record() -> dict[str, Any]:
-    """The same beam with the failing check accepted by the engineer."""
+    """Return the same beam with the failing check accepted by the engineer."""
     return made_sheet(d_bars=2, accepted=True).close().data
-
-

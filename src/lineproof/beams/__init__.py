@@ -1,1 +1,6 @@
-""""""
+"""Beams: the engineering flow from inputs to checked reinforcement."""
+
+from lineproof.beams.floor_beam import FloorBeam, floor_beam
+from lineproof.beams.study import SectionStudy, section_study
+
+__all__ = ["FloorBeam", "SectionStudy", "floor_beam", "section_study"]

@@ -3,6 +3,9 @@
 from __future__ import annotations
 
 from lineproof.beams.inputs import FloorBeamInputs
+from lineproof.beams.layout import BARS
+from lineproof.beams.steps import Steps
+from lineproof.formula import Criterion
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, cover, materials, stress_block
 from lineproof.standards.codes import CodePair
@@ -68,29 +71,27 @@ def _record_modulus(sheet: Sheet, density: str) -> None:
         sheet.line(materials.E_C_GENERAL)
 
 
-def record_cover(sheet: Sheet, inputs: FloorBeamInputs, size: str) -> None:
-    """Record cover for durability and for fire, with principal bars of that size."""
+def record_cover(sheet: Sheet, inputs: FloorBeamInputs) -> None:
+    """Record cover for durability and for fire of the stirrups and the bottom bars."""
     with sheet.part(COVER, "Cover for durability and fire"):
-        sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b")
-        sheet.lookup("d_b", bars.BARS, size)
-        sheet.line(cover.COVER_TO_BARS)
+        steps = Steps(sheet, {n: sheet.entry(f"{BARS}/{n}") for n in ("d_bs", "d_b")})
+        steps.line(cover.COVER_TO_BARS)
         for column in ("f_cmin", "c_min", "r_cb", "r_ca"):
             sheet.lookup(column, cover.EXPOSURES, inputs.exposure)
-        sheet.check(cover.STRONG_ENOUGH)
-        sheet.line(cover.COVER_REQUIRED_STIRRUP)
-        sheet.check(cover.DURABLE)
-        sheet.line(cover.COVER_REQUIRED_BAR)
-        sheet.check(cover.DURABLE_BAR)
+        steps.check(cover.STRONG_ENOUGH)
+        steps.line(cover.COVER_REQUIRED_STIRRUP)
+        steps.check(cover.DURABLE)
+        steps.line(cover.COVER_REQUIRED_BAR)
+        steps.check(cover.DURABLE_BAR)
         sheet.lookup("c_fire", cover.FIRE_COVER, inputs.fire_rating)
-        sheet.check(cover.FIRE_SAFE)
-        hours = float(inputs.fire_rating.split()[0])
-        sheet.check(_width_for_fire(hours))
+        steps.check(cover.FIRE_SAFE)
+        steps.check(_width_for_fire(float(inputs.fire_rating.split()[0])))
         if inputs.slab:
             sheet.lookup("h_fire", cover.FIRE_SLAB, inputs.fire_rating, inputs.fire_aggregate)
-            sheet.check(cover.FIRE_SAFE_SLAB)
+            steps.check(cover.FIRE_SAFE_SLAB)
 
 
-def _width_for_fire(hours: float) -> cover.Criterion:
+def _width_for_fire(hours: float) -> Criterion:
     if hours > 3:  # noqa: PLR2004 - D-2.9
         return cover.WIDE_ENOUGH_THREE_HOURS
     return cover.WIDE_ENOUGH_TWO_HOURS if hours > 2 else cover.WIDE_ENOUGH  # noqa: PLR2004 - D-2.9

@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import dataclass
 from itertools import pairwise
 
 from lineproof.drawing import (
     TEXT_SIZE,
     THIN,
     Circle,
+    Dash,
     Figure,
     Line,
     Point,
@@ -24,41 +26,49 @@ PAGE_WIDTH = 165.0
 MARKS = (0.25, 0.5, 0.75, 1.0)
 
 
+@dataclass(frozen=True, slots=True)
+class MomentLevel:
+    """A moment in kN.m drawn as a level: its printed label, its name in words, its dashes."""
+
+    moment: float
+    label: Runs
+    name: str
+    dash: Dash
+
+
 def capacity_figure(
     points: Sequence[Point],
     chosen: Point,
     chosen_label: Runs,
+    levels: Sequence[MomentLevel],
     *,
-    factored: float,
-    factored_label: Runs,
-    cracking: float,
-    cracking_label: Runs,
     caption: str = "Resistance against amount of steel",
     alt: str = "",
 ) -> Figure:
     """Draw M_r in kN.m against A_s over its balanced value.
 
-    ``points`` are pairs (ratio, moment) in rising order of ratio; ``chosen`` lies on the curve.
+    ``points`` are pairs (ratio, moment) in rising order of ratio; ``chosen`` lies on the curve;
+    ``levels`` are moments drawn as horizontal lines.
     The marks at a quarter, a half, three quarters and the whole of the balanced steel are drawn
     where the curve reaches them.
     """
-    labels = (factored_label, cracking_label, _RESISTANCE)
-    levels = (factored, cracking)
-    axes, x_ticks, y_ticks = _axes([*points, chosen], levels, labels)
+    labels = (*(each.label for each in levels), _RESISTANCE)
+    moments = [each.moment for each in levels]
+    axes, x_ticks, y_ticks = _axes([*points, chosen], moments, labels)
     shapes = [
         *frame(axes, x_ticks, y_ticks, _X_LABEL, _Y_LABEL),
         curve(axes, points),
-        level(axes, factored, "long"),
-        level(axes, cracking, "dotted"),
+        *(level(axes, each.moment, each.dash) for each in levels),
         *_marks(axes, points),
         *drop_lines(axes, chosen),
-        *_chosen(axes, points, levels, chosen, chosen_label),
-        *_names(axes, (*levels, points[-1][1]), labels),
+        *_chosen(axes, points, moments, chosen, chosen_label),
+        *_names(axes, (*moments, points[-1][1]), labels),
     ]
     text = (
         f"Curve of factored resistance against steel; {_plain(chosen_label)} gives "
-        f"{chosen[1]:.0f} kN·m at {chosen[0]:.3f} of the balanced steel; "
-        f"factored moment {factored:.0f} kN·m, cracking moment {cracking:.0f} kN·m."
+        f"{chosen[1]:.0f} kN·m at {chosen[0]:.3f} of the balanced steel"
+        + "".join(f"; {each.name} {each.moment:.0f} kN·m" for each in levels)
+        + "."
     )
     return Figure(PAGE_WIDTH, 72.0, 1.0, (0.0, 0.0), tuple(shapes), alt or text, caption)
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.figure_capacity import capacity_figure, stress_strain_figure
+from lineproof.beams.figure_capacity import MomentLevel, capacity_figure, stress_strain_figure
 from lineproof.beams.figure_loading import UniformLoad, loading_figure
 from lineproof.beams.figure_section import BarRow, SectionShape, section_figure
 from lineproof.beams.figure_strain import Force, StressState, strain_stress_figure
@@ -10,6 +10,7 @@ from lineproof.beams.figure_strain import Force, StressState, strain_stress_figu
 __all__ = [
     "BarRow",
     "Force",
+    "MomentLevel",
     "SectionShape",
     "StressState",
     "UniformLoad",

@@ -2,18 +2,18 @@
 
 from __future__ import annotations
 
-import difflib
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Any, Literal
 
 from lineproof.beams.bars import BarLayers, read_bars
 from lineproof.errors import FaultList, UserError
-from lineproof.quantity import QuantityInput, Typed, echo, read_quantity
+from lineproof.quantity import QuantityInput, Typed, echo, internal_factor, read_quantity
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_COVER, FIRE_SLAB
 from lineproof.standards.a23_3.materials import DENSITY_FACTORS, LEAST_F_C, MOST_F_C
+from lineproof.standards.codes import CodePair, code_pair
 from lineproof.standards.nbc.loads import USES
 
 Shape = Literal["T", "L", "rectangular"]
@@ -38,7 +38,7 @@ RANGES: Mapping[str, Range] = {
     "tributary_width": Range("m", 0.1, 20),
     "b_w": Range("mm", 100, 2000),
     "h": Range("mm", 150, 3000),
-    "h_f": Range("mm", 40, 1000),
+    "h_f": Range("mm", 20, 1000),
     "b_f": Range("mm", 100, 20000),
     "d": Range("mm", 60, 3000),
     "f_c": Range("MPa", LEAST_F_C, MOST_F_C),
@@ -57,9 +57,8 @@ def read_input(name: str, given: QuantityInput) -> Typed:
     """Read one quantity of :data:`RANGES`; raises :class:`UserError` that names the input."""
     allowed = RANGES[name]
     typed = read_quantity(name, given, allowed.unit)
-    value = read_quantity(name, given, allowed.unit).value
-    low, high = (read_quantity(name, f"{x} {allowed.unit}", allowed.unit).value
-                 for x in (_plain(allowed.low), _plain(allowed.high)))
+    value = typed.value
+    low, high = (x * internal_factor(allowed.unit) for x in (allowed.low, allowed.high))
     if value < 0 or (value == 0 and not allowed.zero):
         what = "negative" if value < 0 else "zero"
         raise UserError(
@@ -129,13 +128,14 @@ class FloorBeamInputs:
         return self.h_f is not None
 
 
-class _Reader:
+class InputReader:
     """Reads inputs one by one and keeps every fault."""
 
     def __init__(self, given: Mapping[str, Any]) -> None:
         self.given, self.faults = given, FaultList()
 
     def take(self, name: str, read: Callable[..., Any], *more: object) -> Any:
+        """Read one input by name; note its faults and go on."""
         try:
             return read(name, self.given[name], *more)
         except UserError as error:
@@ -143,13 +143,34 @@ class _Reader:
             return None
 
     def take_if_given(self, name: str, read: Callable[..., Any], *more: object) -> Any:
+        """Read one input that may be left out."""
         return None if self.given[name] is None else self.take(name, read, *more)
 
+    def code_pair(self, project: Mapping[str, Any]) -> Any:
+        """Read the locked code pair of the project."""
+        try:
+            return code_pair(project.get("codes", {}).get("pair", "nothing"))
+        except UserError as error:
+            self.faults.take(error)
+            return None
 
-def read_floor_beam(given: Mapping[str, Any]) -> FloorBeamInputs:
-    """Read and check all inputs; raises one :class:`UserError` with every fault."""
-    reader = _Reader(given)
+    def smaller(self, small: str, large: str, read: Mapping[str, Typed | None]) -> None:
+        """Note a fault if one size is not smaller than another."""
+        first, second = read[small], read[large]
+        if first is not None and second is not None and first.value >= second.value:
+            self.faults.add(
+                f"{small}: {echo(self.given[small])} is not less than {large} of "
+                f"{echo(self.given[large])}; write a smaller {small} or a larger {large}"
+            )
+
+
+def read_floor_beam(
+    given: Mapping[str, Any], project: Mapping[str, Any]
+) -> tuple[FloorBeamInputs, CodePair]:
+    """Read and check all inputs and the code pair; raises one :class:`UserError` with every fault."""
+    reader = InputReader(given)
     take = reader.take
+    pair = reader.code_pair(project)
     shape = take("shape", one_of, SHAPES)
     fields = {
         "shape": shape,
@@ -178,11 +199,12 @@ def read_floor_beam(given: Mapping[str, Any]) -> FloorBeamInputs:
     }  # fmt: skip
     take("web_openings", _no_openings)
     _check_flange(fields, given, reader.faults)
+    reader.smaller("h_f", "h", fields)
     _check_geometry(fields, given, reader.faults)
     reader.faults.raise_if_any()
     if fields["tributary_width"] is None:
         fields["tributary_width"] = fields["spacing"]
-    return FloorBeamInputs(**fields)
+    return FloorBeamInputs(**fields), pair
 
 
 def _fire_rating(name: str, given: QuantityInput) -> str:
@@ -218,9 +240,7 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
 
 
 def _check_geometry(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
-    h, h_f, b_w = fields["h"], fields["h_f"], fields["b_w"]
-    if h is not None and h_f is not None and h_f.value >= h.value:
-        faults.add(f"h_f: {echo(given['h_f'])} is not less than h of {echo(given['h'])}; write a deeper beam")
+    h, b_w = fields["h"], fields["b_w"]
     spacing, span = fields["spacing"], fields["span"]
     if fields["shape"] != "rectangular" and spacing is not None and b_w is not None:
         if spacing.value <= b_w.value:
@@ -233,9 +253,3 @@ def _check_geometry(fields: Mapping[str, Any], given: Mapping[str, Any], faults:
             f"span: {echo(given['span'])} is less than twice h of {echo(given['h'])}: a deep beam "
             "is outside the method; use strut-and-tie (A23.3, 10.7)"
         )
-
-
-def nearest(word: str, words: list[str]) -> str:
-    """Return ', did you mean ...' for a near miss, else nothing."""
-    close = difflib.get_close_matches(word, words, n=1)
-    return f"; did you mean {close[0]!r}?" if close else ""

@@ -72,7 +72,7 @@ def _record_figure(sheet: Sheet, parts: list[Entry], w_f: Entry, M_f: Entry, V_f
         for p in parts
         if p.value > 0
     ]
-    end = (("V", "italic"), ("f", "sub"), (f" = {in_unit(V_f.value, 'kN', 3)} kN", "normal"))
+    end = (("V", "italic"), ("f", "sub"), (f" = {in_unit(V_f.value, 'kN', 3)} kN", "roman"))
     width = sheet.entry("given/b_tr")
     span = sheet.entry("given/l")
     figure = loading_figure(
@@ -81,7 +81,7 @@ def _record_figure(sheet: Sheet, parts: list[Entry], w_f: Entry, M_f: Entry, V_f
         reactions=(end, end),
         note=f"tributary width {width.value / 1000:g} m; "
         f"factored {in_unit(w_f.value, 'kN/m', 3)} kN/m",
-        moment=(("M", "italic"), ("f", "sub"), (f" = {in_unit(M_f.value, 'kN.m', 3)} kN·m", "normal")),
+        moment=(("M", "italic"), ("f", "sub"), (f" = {in_unit(M_f.value, 'kN.m', 3)} kN·m", "roman")),
         caption="Loads on the span, unfactored, and factored moment",
     )
     sheet.figure(

@@ -49,8 +49,3 @@ def compression_zone(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
     if shape == "rectangular":
         return {"b": b_w, "b_w": b_w, "h_f": sheet.find("h")}
     return {"b": sheet.find("b_f"), "b_w": b_w, "h_f": sheet.find("h_f")}
-
-
-def only(bound: dict[str, Entry], names: tuple[str, ...]) -> dict[str, Entry]:
-    """Return the bindings that a formula has names for."""
-    return {name: entry for name, entry in bound.items() if name in names}

@@ -112,7 +112,7 @@ def failed_checks(record: Record) -> list[str]:
     for entry_id in record.failed:
         entry = record.entries[entry_id]
         accepted = entry.get("exception")
-        note = f" (accepted by {accepted['initials']})" if accepted else ""
-        title = f", {entry['title']}" if entry["title"] else ""
+        note = f", accepted by {accepted['initials']}" if accepted else ""
+        title = f" ({entry['title']})" if entry["title"] else ""
         sentences.append(f"{record.calc_id}: check {entry_id}{title} does not hold{note}")
     return sentences

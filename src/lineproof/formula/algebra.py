@@ -7,19 +7,15 @@ from __future__ import annotations
 
 from collections.abc import Callable, Mapping
 from functools import cache
-from typing import TYPE_CHECKING, Any
+from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.formula.compiled import compile_tree
 from lineproof.formula.formula import Formula
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree, names_of
 
-if TYPE_CHECKING:
-    import sympy
-
-    Expr = sympy.Expr
-else:
-    Expr = Any
+Expr = Any
+"""A sympy expression; sympy ships no types."""
 
 
 @cache
@@ -82,11 +78,17 @@ def _function(name: str, args: list[Expr]) -> Expr:
 
 
 def value_at(tree: Tree, values: Mapping[str, float], digits: int = 50) -> float:
-    """Return the sympy form's value at the given floats, evaluated with ``digits`` digits."""
+    """Return the sympy form's value at the given floats, evaluated with ``digits`` digits.
+
+    Raises :class:`UserError` where there is no real value.
+    """
     import sympy  # noqa: PLC0415 - 0.25 s, only for algebra
 
     at = {symbol(name): sympy.Rational(value) for name, value in values.items()}
-    return float(expression(tree).subs(at).evalf(digits))
+    value = expression(tree).subs(at).evalf(digits)
+    if not value.is_Float and not value.is_Rational:
+        raise UserError(f"no real value, but {str(value)[:60]}")
+    return float(value)
 
 
 def partial_derivative(formula: Formula, name: str) -> Callable[..., float]:

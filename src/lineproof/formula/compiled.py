@@ -17,12 +17,20 @@ _BINARY: dict[str, type[ast.operator]] = {
     "/": ast.Div,
     "**": ast.Pow,
 }
-COMPARE: dict[str, Callable[[float, float], bool]] = {
+COMPARE: dict[str, Callable[[Any, Any], bool]] = {
     "<=": operator.le,
     "<": operator.lt,
     ">=": operator.ge,
     ">": operator.gt,
 }
+
+
+def _cbrt(value: float) -> float:
+    if value < 0:
+        # As sqrt: a negative size under a root is a mistake, and algebra has no real root here.
+        msg = "root of a negative number"
+        raise ValueError(msg)
+    return math.cbrt(value)
 
 
 def _sin(angle: float) -> float:
@@ -43,7 +51,7 @@ def _cot(angle: float) -> float:
 
 # fabs, since abs of a complex number would hide the root of a negative one.
 _FUNCTIONS: dict[str, object] = {
-    "sqrt": math.sqrt, "cbrt": math.cbrt, "abs": math.fabs, "min": min, "max": max,
+    "sqrt": math.sqrt, "cbrt": _cbrt, "abs": math.fabs, "min": min, "max": max,
     "sin": _sin, "cos": _cos, "tan": _tan, "cot": _cot,
 }  # fmt: skip
 

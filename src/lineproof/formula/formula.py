@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 from functools import cached_property
 from typing import TYPE_CHECKING, Any, Literal
 
+from lineproof.errors import UserError
 from lineproof.formula.compiled import COMPARE, compile_step, compile_tree
 from lineproof.formula.grammar import parse_criterion, parse_line
 from lineproof.formula.notation import Notation
@@ -104,6 +105,8 @@ def formula(
     """
     symbol, tree = parse_line(text)
     if unit is None:
+        if symbol not in notation:
+            raise UserError(f"{symbol}: say in which unit it is printed: unit='kN.m'")
         unit = notation[symbol].unit
     return Formula(
         text, symbol, tree, names_of(tree), _spelling(unit), clause, title, basis,

@@ -10,19 +10,15 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Mapping
-from typing import TYPE_CHECKING, Any
+from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.formula.formula import Criterion, Formula
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 from lineproof.quantity.units import UNITS, registry
 
-if TYPE_CHECKING:
-    import pint
-
-    PintUnit = pint.Unit
-else:
-    PintUnit = Any
+PintUnit = Any
+"""A pint unit; pint's own types do not say that a power of a unit is a unit."""
 
 _NUMBER_UNIT = re.compile(r"(?:(1/)?)([A-Za-z0-9./]*?)(?:\^(\d+(?:\.\d+)?))?\Z")
 _SCALE = 1e-12
@@ -37,7 +33,7 @@ def number_unit(text: str) -> PintUnit:
     match = _NUMBER_UNIT.match(text)
     if match is None or (match[2] and match[2] not in UNITS):
         raise UnitProofError(f"{text!r} is not the unit of a constant; write for example 'MPa^0.5'")
-    unit = registry().Unit(UNITS[match[2]].expression)
+    unit: PintUnit = registry().Unit(UNITS[match[2]].expression)
     unit = unit ** float(match[3]) if match[3] else unit
     return unit**-1 if match[1] else unit
 

@@ -39,11 +39,14 @@ class Cell:
 def load_notebook(path: Path) -> dict[str, Any]:
     """Read a notebook file as plain JSON data; raises :class:`UserError`."""
     try:
-        if path.stat().st_size > LARGEST_NOTEBOOK:
-            raise UserError(f"{path}: larger than {LARGEST_NOTEBOOK // 1_000_000} MB; not read")
-        data = json.loads(path.read_text(encoding="utf-8"))
+        with path.open("rb") as stream:
+            content = stream.read(LARGEST_NOTEBOOK + 1)
     except OSError as error:
         raise UserError(f"{path}: cannot be read ({error.strerror})") from None
+    if len(content) > LARGEST_NOTEBOOK:
+        raise UserError(f"{path}: larger than {LARGEST_NOTEBOOK // 1_000_000} MB; not read")
+    try:
+        data = json.loads(content)
     except (ValueError, RecursionError):
         raise UserError(f"{path}: not a notebook; give a file that Jupyter has saved") from None
     check_format(data, str(path))
@@ -52,7 +55,7 @@ def load_notebook(path: Path) -> dict[str, Any]:
 
 def check_format(data: object, name: str) -> None:
     """Refuse what is not a notebook of format 4."""
-    if not isinstance(data, Mapping) or not isinstance(data.get("cells", ()), list):
+    if not isinstance(data, Mapping) or not isinstance(data.get("cells", []), list):
         raise UserError(f"{name}: not a notebook; give a file that Jupyter has saved")
     if data.get("nbformat") != _FORMAT or "cells" not in data:
         given = str(data.get("nbformat", "none"))[:20]

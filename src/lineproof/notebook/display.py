@@ -23,7 +23,7 @@ from lineproof.typeset.rows import PrintedRow, PrintedTable, notation_of, printe
 
 ANCHOR = "application/vnd.lineproof.part+json"
 METADATA = "lineproof"
-_WIDEST = 34.0  # em; a longer formula breaks before one of its signs
+_WIDEST = 26.0  # em; a longer formula breaks before one of its signs
 _CELL = "text-align:left;vertical-align:top"
 _NO_TEX = 'class="mathjax_ignore"'  # a "$" in a title must stay a "$"
 
@@ -105,17 +105,25 @@ def _cells_run(shell: Any) -> list[str]:
 
 
 def _plain(part: Mapping[str, Any], rows: list[PrintedRow]) -> str:
-    blocks = [f"{part['label']}  {printable(part['title'])}"]
-    for printed in rows:
-        marks = [printed.label, f"[{printable(printed.clause)}]" if printed.clause else ""]
-        head = "  ".join(mark for mark in marks if mark)
-        body = printed.plain.split("\n") if printed.plain else []
-        if printed.ratio:
-            body.append(f"ratio {printed.ratio}")
-        body += _plain_table(printed.table)
-        body += [text for text in (printed.caption, *printed.remarks) if text]
-        blocks.append("\n    ".join([head, *map(printable, body)] if head else body))
-    return "\n".join(blocks)
+    blocks = [f"{part['label']}  {part['title']}", *map(_plain_row, rows)]
+    return "\n".join(printable(line) for block in blocks for line in block.split("\n"))
+
+
+def _plain_row(printed: PrintedRow) -> str:
+    clause = f"[{printed.clause}]" if printed.clause else ""
+    head = "  ".join(mark for mark in (printed.label, clause, printed.title) if mark)
+    inputs = ", ".join(map(plain, printed.inputs))
+    lines = [
+        f"{printed.text} {inputs}".strip(),
+        *(chain.plain for chain in printed.chains),
+        plain(printed.result) if printed.result is not None else "",
+        f"{printed.verdict}, ratio {printed.ratio}" if printed.ratio else printed.verdict,
+        printed.conclusion,
+        *_plain_table(printed.table),
+        f"[figure: {printed.alt}]" if printed.figure is not None else "",
+        *printed.remarks,
+    ]
+    return "\n    ".join([head, *filter(None, lines)] if head else [*filter(None, lines)])
 
 
 def _plain_table(table: PrintedTable | None) -> list[str]:
@@ -140,31 +148,41 @@ def _html(part: Mapping[str, Any], rows: list[PrintedRow]) -> str:
     body = "".join(map(_row_html, rows))
     return (
         f"<p><strong {_NO_TEX}>{_text(title)}</strong></p>\n"
-        f'<table style="width:100%"><thead><tr><th style="{_CELL}">Line, clause</th>'
-        f'<th style="{_CELL}">Working</th><th style="{_CELL}">Result</th></tr></thead>'
-        f"<tbody>{body}</tbody></table>"
+        f'<table style="width:100%"><thead><tr><th style="{_CELL};width:12%">Clause</th>'
+        f'<th style="{_CELL};width:64%">Working</th><th style="{_CELL};width:24%">Result</th>'
+        f"</tr></thead><tbody>{body}</tbody></table>"
     )
 
 
 def _row_html(printed: PrintedRow) -> str:
-    place = [_text(mark) for mark in (printed.label, printed.clause) if mark]
     return (
-        f'\n<tr><td {_NO_TEX} style="{_CELL}">{"<br>".join(place)}</td>'
+        f'\n<tr><td {_NO_TEX} style="{_CELL}">{_text(printed.clause)}</td>'
         f'<td style="{_CELL}">{"<br>".join(_working(printed))}</td>'
         f'<td style="{_CELL}">{"<br>".join(_result(printed))}</td></tr>'
     )
 
 
 def _working(printed: PrintedRow) -> list[str]:
-    lines = [_span(printed.title)] if printed.title and printed.figure is None else []
+    lines = _titled(printed)
+    if printed.text:
+        inputs = ", ".join(map(_tex, printed.inputs))
+        lines.append(f"{_span(printed.text)} {inputs}".rstrip())
     for chain in printed.chains:
         lines += _chain(chain)
-    if printed.figure is not None:
-        lines += [_picture(printed), f"<em {_NO_TEX}>{_text(printed.caption)}</em>"]
+    if printed.conclusion:
+        lines.append(_span(f"∴ {printed.conclusion}"))
     if printed.table is not None:
         lines.append(_table(printed.table))
-    lines += [_span(text) for text in (printed.text, printed.conclusion) if text]
     return lines + [f"<small {_NO_TEX}>{_text(remark)}</small>" for remark in printed.remarks]
+
+
+def _titled(printed: PrintedRow) -> list[str]:
+    if printed.figure is not None:
+        caption = printed.caption or printed.title
+        return [_picture(printed), f"<em {_NO_TEX}>{_text(caption)}</em>"]
+    label = f"<strong {_NO_TEX}>{_text(printed.label)}</strong>" if printed.label else ""
+    title = _span(printed.title) if printed.title else ""
+    return [f"{label} {title}".strip()] if label or title else []
 
 
 def _result(printed: PrintedRow) -> list[str]:

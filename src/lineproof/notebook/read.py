@@ -206,13 +206,8 @@ def _walk(cells: tuple[Cell, ...]) -> tuple[tuple[str, str], ...]:
 
 
 def _remarks(cells: tuple[Cell, ...], name: str) -> list[str]:
-    silent = [
-        cell
-        for cell in cells
-        for output in cell.outputs
-        if not {ANCHOR, MIME} & set(output.get("data", {}))
-    ]
     return [
         f"{name}: what {cell.name} shows beside the record is not printed"
-        for cell in dict.fromkeys(silent)
+        for cell in cells
+        if any(not {ANCHOR, MIME} & set(output.get("data", {})) for output in cell.outputs)
     ]

@@ -25,7 +25,6 @@ from lineproof.typeset.nodes import (
     Fence,
     Fraction,
     Letter,
-    Math,
     Prime,
     Root,
     Row,
@@ -77,7 +76,9 @@ class Interned:
                 return self._add([prose_tree(block) for block in blocks])
         if isinstance(value, _NODES):
             return self._add(typst_tree(value))
-        msg = f"{type(value).__name__} in the Typst template; only text, maths and prose are printed"
+        msg = (
+            f"{type(value).__name__} in the Typst template; only text, maths and prose are printed"
+        )
         raise TypeError(msg)
 
     def _at(self, key: str, item: str) -> str:
@@ -211,9 +212,7 @@ def _script_json(text: str) -> str:
 
 def _css_text(text: str) -> str:
     """Return text for the inside of a CSS string, everything but plain letters by its code."""
-    return "".join(
-        c if c.isascii() and c.isalnum() else f"\\{ord(c):06x}" for c in printable(text)
-    )
+    return "".join(c if c.isascii() and c.isalnum() else f"\\{ord(c):06x}" for c in printable(text))
 
 
 @cache

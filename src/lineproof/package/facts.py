@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-import datetime
+import datetime as dt
 from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
@@ -11,7 +11,7 @@ from lineproof.errors import UserError
 
 STATUSES = ("preliminary", "for review", "for permit", "for construction")
 PAPERS = {"letter": "us-letter", "us-letter": "us-letter", "a4": "a4"}
-_NO_DATE = datetime.date(2000, 1, 1)
+_NO_DATE = dt.date(2000, 1, 1)
 
 
 @dataclass(frozen=True, slots=True)
@@ -53,7 +53,7 @@ class ProjectFacts:
     status: str
     superseded: str
     revision: str
-    date: datetime.date
+    date: dt.date
     date_text: str
     paper: str
 
@@ -147,12 +147,12 @@ def _criteria(facts: _Tables, codes: Mapping[str, Any]) -> tuple[Fact, ...]:
     return tuple(fact for fact in stated if fact.value)
 
 
-def _date(text: str) -> datetime.date:
+def _date(text: str) -> dt.date:
     """Return the issue date, the only date that enters the files; a fixed one stands for none."""
     if not text:
         return _NO_DATE
     try:
-        date = datetime.date.fromisoformat(text[:10])
+        date = dt.date.fromisoformat(text[:10])
     except ValueError:
         raise UserError(
             f"issue.date: {text[:40]!r} is not a date; write it like '2026-11-20'"

@@ -11,7 +11,6 @@ from lineproof.package.model import Package
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import MISSING_NOTE
 
-
 _PIECES = {
     "latin": "U+0000-00FF, U+0131, U+0152-0153, U+02BB-02BC, U+02C6, U+02DA, U+02DC, U+2009, "
     "U+2013-2014, U+2018-201E, U+2020-2026, U+2032-2044, U+20AC, U+2122, U+2191, U+2193, U+2212",
@@ -20,7 +19,11 @@ _PIECES = {
     "greek": "U+0386-03F5",
     "cyrillic": "U+0400-0491, U+2116",
 }
-_FACES = (("400-normal", "normal", "400"), ("400-italic", "italic", "400"), ("700-normal", "normal", "700"))
+_FACES = (
+    ("400-normal", "normal", "400"),
+    ("400-italic", "italic", "400"),
+    ("700-normal", "normal", "700"),
+)
 FONTS = tuple(
     (f"libertinus-serif-{piece}-{face}.woff2", style, weight)
     for piece in _PIECES

@@ -33,13 +33,19 @@ Walk = Iterable[tuple[str, str]]
 _PART_LEVEL, _DEEPEST_LEVEL = 2, 4
 
 CAUTIONS = (
-    "This package is not valid until it has been reviewed and sealed by the licensed engineer "
-    "responsible for the work.",
-    "The purchased standard, the local building code and its amendments govern; clause numbers "
-    "here point to them and do not replace them.",
+    (
+        "This package is not valid until it has been reviewed and sealed by the licensed engineer "
+        "responsible for the work."
+    ),
+    (
+        "The purchased standard, the local building code and its amendments govern; clause "
+        "numbers here point to them and do not replace them."
+    ),
     "Gravity beams only: the members of this package are not part of the lateral-load system.",
-    "Values and rules given from memory or as common practice are listed under "
-    "“Values to confirm” and must be confirmed in the office's own copy of the standard.",
+    (
+        "Values and rules from memory are listed under “Values to confirm”; the office confirms "
+        "each in its own copy of the standard."
+    ),
 )
 
 

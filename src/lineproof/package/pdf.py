@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-import datetime
+import datetime as dt
 import tempfile
 import threading
 from functools import cache
@@ -56,11 +56,11 @@ def typst_source(package: Package) -> tuple[str, str]:
     return source, interned.to_json()
 
 
-def compile_pdf(source: str, texts: str, date: datetime.date) -> bytes:
+def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
     """Compile Typst source with its texts; a warning is a failure."""
     import typst  # noqa: PLC0415 - only printing needs it
 
-    moment = datetime.datetime(date.year, date.month, date.day, tzinfo=datetime.UTC)
+    moment = dt.datetime(date.year, date.month, date.day, tzinfo=dt.UTC)
     try:
         made, warnings = _compiler().compile_with_warnings(
             {"main.typ": source.encode(), "maths.typ": _library("maths.typ")},

@@ -107,7 +107,9 @@ class _Tokens:
             raise UserError("prose: nested too deeply; write it with fewer levels")
         return tuple(mark for token in tokens for mark in self._mark(token, depth + 1))
 
-    def _mark(self, token: dict[str, Any], depth: int) -> tuple[Mark, ...]:
+    def _mark(  # noqa: C901, PLR0911 - one case per kind of token
+        self, token: dict[str, Any], depth: int
+    ) -> tuple[Mark, ...]:
         kind = token["type"]
         children = token.get("children") or []
         if kind in _NESTED:
@@ -155,7 +157,7 @@ class _Tokens:
         return inside if same else (*inside, Mark("text", f" ({address})"))
 
     def _refused(self, kind: str, token: dict[str, Any]) -> tuple[Mark, ...]:
-        raw = self._restored(str(token.get("raw") or token.get("attrs") or ""))[:60]
+        raw = self._restored(str(token.get("raw") or token.get("attrs") or "")).strip()[:60]
         if "html" in kind:
             self.faults.add(f"prose: raw HTML {raw!r} is not printed; write it in Markdown")
         else:
@@ -186,7 +188,7 @@ def prose_html(prose: Prose) -> str:
     return "".join(map(_html, prose.blocks))
 
 
-def _html(mark: Mark) -> str:
+def _html(mark: Mark) -> str:  # noqa: PLR0911 - one return per kind of mark
     if mark.kind == "table":
         return _html_table(mark)
     inside = "".join(map(_html, mark.children))

@@ -15,6 +15,7 @@ _SCRIPT = re.compile(
     rf'<script type="{re.escape(_MIME)}"[^>]*>(.*?)</script>', re.DOTALL | re.IGNORECASE
 )
 _SUFFIX = ".lineproof.json"
+_PLACE = re.compile(r"Record (\d{1,4}) of ")
 
 
 def records_in_html(text: str) -> list[dict[str, Any]]:
@@ -50,20 +51,22 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
 
     try:
         reader = pypdf.PdfReader(io.BytesIO(content))
-        if reader.is_encrypted:
-            raise UserError("this PDF is encrypted; give it without a password")
-        return [
-            (name, part)
-            for name, parts in reader.attachments.items()
-            for part in parts
-            if len(part) <= LARGEST_RECORD
-        ]
-    except UserError:
-        raise
+        order = _printed_order(reader)
+        found = [(name, part) for name, parts in reader.attachments.items() for part in parts]
+        return sorted(found, key=lambda pair: order.get(pair[0], len(order)))
+    except pypdf.errors.FileNotDecryptedError:
+        raise UserError("this PDF is encrypted; give it without a password") from None
     # A damaged file makes the reader fail in any of its layers.
     except Exception as error:  # noqa: BLE001
         reason = f"{type(error).__name__}: {error}"[:80]
         raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
+
+
+def _printed_order(reader: Any) -> dict[str, int]:
+    """Return the place of each attachment as printed; the PDF's own lists go by name."""
+    files = [file.get_object() for file in reader.root_object.get("/AF", [])]
+    places = ((str(file.get("/UF", "")), _PLACE.match(str(file.get("/Desc", "")))) for file in files)
+    return {name: int(place[1]) for name, place in places if place}
 
 
 def _record(text: str, name: str) -> dict[str, Any]:

@@ -1,4 +1,4 @@
-"""The tables that gather a record: checks, failures, load take-down, notation, values to confirm."""
+"""The tables that gather a record: checks, failures, loads, notation, values to confirm."""
 
 from __future__ import annotations
 
@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from lineproof.formula.grammar import parse_criterion
-from lineproof.formula.notation import Notation
+from lineproof.formula.notation import Notation, Symbol
 from lineproof.formula.tree import Name, Tree
 from lineproof.typeset.nodes import EQUALS, Math, row
 from lineproof.typeset.rows import PrintedRow, notation_of
@@ -161,7 +161,7 @@ def load_rows(parts: Sequence[Mapping[str, Any]], rows: Rows, prefix: str) -> tu
 
 def notation_rows(records: Sequence[Mapping[str, Any]]) -> tuple[NotationRow, ...]:
     """Return every symbol of all records once, in order of its letters."""
-    found = {}
+    found: dict[tuple[str, str, str], Symbol] = {}
     for record in records:
         for symbol in notation_of(record).values():
             found.setdefault((symbol.id, symbol.meaning, symbol.unit), symbol)

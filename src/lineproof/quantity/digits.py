@@ -8,7 +8,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
-from decimal import ROUND_HALF_EVEN, Context, Decimal
+from decimal import ROUND_HALF_UP, Context, Decimal
 
 START_DIGITS = 3
 MOST_DIGITS = 6
@@ -16,14 +16,14 @@ ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
 _PLAIN_FROM, _PLAIN_BELOW = -4, 6
-_EXACT = Context(prec=400, rounding=ROUND_HALF_EVEN)
+_EXACT = Context(prec=400, rounding=ROUND_HALF_UP)
 
 
 def significant(value: float | Decimal, digits: int) -> Decimal:
     """Return ``value`` rounded to ``digits`` significant digits, or to ``-digits`` decimals."""
     if digits <= 0:
         return Decimal(value).quantize(Decimal(1).scaleb(digits), context=_EXACT)
-    return Context(prec=digits, rounding=ROUND_HALF_EVEN).plus(Decimal(value))
+    return Context(prec=digits, rounding=ROUND_HALF_UP).plus(Decimal(value))
 
 
 def number_text(number: Decimal) -> str:
@@ -31,6 +31,8 @@ def number_text(number: Decimal) -> str:
 
     >>> number_text(Decimal("551e6")), number_text(Decimal("0.140")), number_text(Decimal(0))
     ('551e6', '0.140', '0')
+    >>> number_text(Decimal("2e-16"))
+    '2e-16'
     """
     if not number:
         return "0"
@@ -38,6 +40,8 @@ def number_text(number: Decimal) -> str:
     if _PLAIN_FROM <= exponent < _PLAIN_BELOW:
         return f"{number:f}"
     power = exponent - exponent % 3
+    if int(number.as_tuple().exponent) > power:
+        power = exponent  # 200e-18 would show digits that were rounded away
     return f"{number.scaleb(-power, _EXACT):f}e{power}"
 
 

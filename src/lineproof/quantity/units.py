@@ -150,6 +150,8 @@ def unit_named(text: str) -> Unit:
 
 def _nearest(spelling: str) -> str:
     folded = {name.lower(): name for name in UNITS if name}
+    if spelling.lower() in folded:  # right but for capitals
+        return repr(folded[spelling.lower()])
     close = difflib.get_close_matches(spelling[:20].lower(), folded, n=3, cutoff=0.6)
     return " or ".join(repr(folded[name]) for name in close)
 

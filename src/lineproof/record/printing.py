@@ -49,7 +49,8 @@ def exact_decimal(entry: Entry) -> Decimal | None:
 
 def in_unit(value: float, unit: str, digits: int) -> str:
     """Return an internal value printed in a unit to so many significant digits."""
-    return rounded_text(value / internal_factor(unit), digits)
+    # Divided as decimals: two floats that differ by their last bit must not become one.
+    return rounded_text(Decimal(value) / factor(unit, UNITS[unit].internal), digits)
 
 
 class Printer:
@@ -216,9 +217,15 @@ def _argument_text(entry: Entry, argument: Argument, digits: int, system: System
     shift = factor(UNITS[unit].internal, target)
     exact = exact_decimal(entry)
     if exact is not None:
-        return number_text((exact * shift).normalize())
+        return number_text(_whole((exact * shift).normalize()))
     rounded = significant(argument.value, digits) * shift
     return rounded_text(rounded, digits)
+
+
+def _whole(exact: Decimal) -> Decimal:
+    """Give an exact number its zeros back: 500e6, not 5e8."""
+    exponent = int(exact.as_tuple().exponent)
+    return exact if exponent <= 0 else exact.quantize(Decimal(1).scaleb(exponent - exponent % 3))
 
 
 def _coherent(value: float, unit: str, target: str, digits: int) -> dict[str, str] | None:
@@ -236,7 +243,7 @@ def _truthful(
     """
     while True:
         left, right = (in_unit(value, test.unit, n) for value, n in zip(sides, digits, strict=True))
-        if COMPARE[test.sign](float(left), float(right)) == holds or min(digits) >= ALL_DIGITS:
+        if COMPARE[test.sign](Decimal(left), Decimal(right)) == holds or min(digits) >= ALL_DIGITS:
             return digits
         fewest = max(min(digits), 0)
         digits = [max(n, fewest + 1) for n in digits]
@@ -273,9 +280,14 @@ def _ratio(utilisation: float, *, holds: bool) -> str:
 def utilisation(entry: Entry) -> float | None:
     """Return demand over resistance of a check, if demand >= 0 and resistance > 0."""
     left, right = entry.value
-    if entry.source.sign in (">=", ">"):
+    return ratio(entry.source.sign, left, right)
+
+
+def ratio(sign: str, left: float, right: float) -> float | None:
+    """Return the utilisation of a comparison, or None where it would say nothing."""
+    if sign in (">=", ">"):
         left, right = right, left
     if left < 0 or right <= 0:
         return None
-    ratio: float = left / right
-    return ratio if math.isfinite(ratio) else None
+    made = left / right
+    return made if math.isfinite(made) else None

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from typing import Any
@@ -12,7 +13,9 @@ from lineproof.formula.compiled import COMPARE, compile_tree
 from lineproof.formula.tree import Tree
 from lineproof.quantity import read_quantity
 from lineproof.quantity.units import internal_factor
-from lineproof.record.entry import CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES
+from lineproof.record import shown
+from lineproof.record.entry import CHECK, CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES
+from lineproof.record.printing import ratio
 from lineproof.record.procedures import recall, run
 from lineproof.record.record import Record
 
@@ -40,35 +43,59 @@ def close(first: float, second: float) -> bool:
 
 
 def recompute(record: Record) -> list[Difference]:
-    """Return every difference between the stored values and the recomputed ones.
+    """Return every difference between what the record holds, prints and hashes and its formulas.
 
     Values are recomputed from the givens on, so one wrong line shows with all that follow it.
     """
     values: dict[str, float] = {}
+    units = {i: entry["unit"] for i, entry in record.entries.items() if "unit" in entry}
     differences: list[Difference] = []
     for entry in record.entries.values():
         try:
-            differences.extend(_differences(entry, values))
+            differences.extend(_differences(entry, values, units))
         except (ArithmeticError, ValueError, TypeError, KeyError) as error:
             stored = str(entry.get("value", entry.get("holds", "")))
             differences.append(Difference(entry["id"], "value", stored, f"failed: {error}"))
             if entry["kind"] in VALUES:
-                values[entry["id"]] = _stored(entry["value"], entry["unit"])
+                values.setdefault(entry["id"], _stored(entry["value"], entry["unit"]))
+    again = shown.digests(record.entries)
+    differences += [
+        Difference(i, "digest", entry["digest"], again[i])
+        for i, entry in record.entries.items()
+        if entry["digest"] != again[i]
+    ]
+    differences += [
+        Difference("record", *found) for found in shown.whole(record.data, record.entries)
+    ]
     return differences
 
 
-def _differences(entry: Mapping[str, Any], values: dict[str, float]) -> Iterator[Difference]:
+def _differences(
+    entry: Mapping[str, Any], values: dict[str, float], units: Mapping[str, str]
+) -> Iterator[Difference]:
     kind, entry_id = entry["kind"], entry["id"]
     if kind in CRITERIA:
-        yield from _criterion(entry_id, entry, values)
+        yield from _criterion(entry_id, entry, values, units)
     elif kind in VALUES:
         value = _value(entry, values)
         values[entry_id] = value
         if not close(value, _stored(entry["value"], entry["unit"])):
             again = value / internal_factor(entry["unit"])
             yield Difference(entry_id, "value", f"{entry['value']:.10g}", f"{again:.10g}")
+        for found in _printed(entry, value, values, units):
+            yield Difference(entry_id, *found)
         if kind == FOUND:
-            yield from _criterion(entry_id, entry["closing"], values)
+            yield from _criterion(entry_id, entry["closing"], values, units)
+
+
+def _printed(
+    entry: Mapping[str, Any], value: float, values: Mapping[str, float], units: Mapping[str, str]
+) -> Iterator[shown.Finding]:
+    yield from shown.printed_value(entry["printed"], value)
+    if entry["kind"] == GIVEN:
+        yield from shown.printed_typed(entry)
+    if entry["kind"] in (LINE, FOUND):
+        yield from shown.printed_arguments(entry, values, units)
 
 
 def _stored(value: float, unit: str) -> float:
@@ -83,27 +110,30 @@ def _value(entry: Mapping[str, Any], values: Mapping[str, float]) -> float:
     if kind == LOOKUP:
         return float(entry["printed"]["result"]) * internal_factor(entry["printed"]["unit"])
     if kind == LINE:
-        symbol, tree = parse_line(entry["formula"])
-        if symbol != entry["symbol"]:
-            raise UserError(f"the formula gives {symbol}, not {entry['symbol']}")
+        _, tree = parse_line(entry["formula"])
         return _evaluate(tree, entry["args"], values)
     made = recall(entry["procedure"]["name"], entry["procedure"]["version"])
     if made is None:
         raise UserError(f"procedure {entry['procedure']['name']!r} is not known here")
     named = {name: values[target] for name, target in entry["args"].items()}
-    return run(made, named, entry["settings"])
+    if set(made.names) != set(named):
+        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names)}")
+    value = run(made, named, entry["settings"])
+    if not math.isfinite(value):
+        raise UserError(f"procedure {made.name!r} finds no finite number")
+    return value
 
 
 def _evaluate(tree: Tree, args: Mapping[str, str], values: Mapping[str, float]) -> float:
     names = names_of(tree)
     result = compile_tree(tree, names)(*[values[args[name]] for name in names])
-    if not isinstance(result, float):
+    if not isinstance(result, float) or not math.isfinite(result):
         raise UserError("the result is not a real number")
     return result
 
 
 def _criterion(
-    entry_id: str, test: Mapping[str, Any], values: Mapping[str, float]
+    entry_id: str, test: Mapping[str, Any], values: Mapping[str, float], units: Mapping[str, str]
 ) -> Iterator[Difference]:
     left_tree, sign, right_tree = parse_criterion(test["formula"])
     left = _evaluate(left_tree, test["args"], values)
@@ -112,6 +142,19 @@ def _criterion(
     for what, stored, value in (("left", test["left"], left), ("right", test["right"], right)):
         if not close(_stored(stored, test["unit"]), value):
             yield Difference(entry_id, f"{what} side", f"{stored:.10g}", f"{value / scale:.10g}")
-    holds = COMPARE[sign](left, right)
-    if holds != test["holds"]:
-        yield Difference(entry_id, "truth", str(test["holds"]), str(holds))
+    if _truth(sign, left, right) not in (None, test["holds"]):
+        yield Difference(entry_id, "truth", str(test["holds"]), str(not test["holds"]))
+    for found in shown.printed_comparison(test, (left, right)):
+        yield Difference(entry_id, *found)
+    for found in shown.printed_arguments(test, values, units):
+        yield Difference(entry_id, *found)
+    if test.get("kind") == CHECK:
+        for found in shown.printed_utilisation(test, ratio(sign, left, right)):
+            yield Difference(entry_id, *found)
+
+
+def _truth(sign: str, left: float, right: float) -> bool | None:
+    """Return the truth of a comparison, or None where the last bits decide it."""
+    if left != right and close(left, right):
+        return None
+    return COMPARE[sign](left, right)

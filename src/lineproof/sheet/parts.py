@@ -64,6 +64,13 @@ class Parts:
         found: Entry | None = self._scope_of_part.get(name) if self._part is not None else None
         return self._find(name) if found is None else found
 
+    def entries_of(self, key: str) -> dict[str, Entry]:
+        """Return the entries of a recorded part by symbol; names the call to run if it is missing."""
+        part = self._parts.get(key)
+        if part is None:
+            raise UserError(f"part {key!r} is not recorded{self._run_first(key)}")
+        return dict(part.entries)
+
     def entry(self, entry_id: str) -> Entry:
         """Return a recorded entry by its id ``part-key/symbol``."""
         key, _, symbol = entry_id.partition("/")

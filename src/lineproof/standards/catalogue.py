@@ -8,6 +8,7 @@ from lineproof.formula import Criterion, Formula, Notation
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3 import (
     bars,
+    capacity,
     compression_steel,
     cover,
     crack_control,
@@ -27,7 +28,7 @@ NOTATION: Notation = A23_3 | NBC
 
 _MODULES = (
     materials, stress_block, flange, flexure, compression_steel, minimum, crack_control,
-    bars, cover, strain, loads, combinations,
+    capacity, bars, cover, strain, loads, combinations,
 )  # fmt: skip
 
 

@@ -23,11 +23,11 @@ def _not_printable() -> re.Pattern[str]:
 
 
 def printable(text: str) -> str:
-    """Return text with every character that has no glyph replaced by its code.
+    r"""Return text with every character that has no glyph replaced by its code.
 
     Line ends and tabs become spaces; a letter with a separate accent becomes the joined letter.
 
-    >>> printable("Hall \U0001f600"), printable("a\\tb"), printable("Toe\\u0301")
+    >>> printable("Hall \U0001f600"), printable("a\tb"), printable("Toe\u0301")
     ('Hall <U+1F600>', 'a b', 'Toé')
     """
     if text.isascii() and text.isprintable():

@@ -34,11 +34,23 @@ def mathml(math: Math, *, display: bool = False) -> str:
     return f'<math{mode} displaystyle="true">{_write(math)}</math>'
 
 
+def _is_tall(math: Math) -> bool:
+    """Tell whether brackets must grow; around plain letters the font's own bracket sits closer."""
+    match math:
+        case Row(items):
+            return any(map(_is_tall, items))
+        case Fraction() | Root():
+            return True
+        case Fence(of, _, _):
+            return _is_tall(of)
+    return False
+
+
 def _text(text: str) -> str:
     return escape(printable(text))
 
 
-def _write(math: Math) -> str:
+def _write(math: Math) -> str:  # noqa: PLR0911 - one return per kind of node
     match math:
         case Row(items):
             return f"<mrow>{''.join(map(_write, items))}</mrow>"
@@ -51,14 +63,15 @@ def _write(math: Math) -> str:
         case Scripts():
             return _scripts(prime_beside(math))
         case Fence(of, left, right):
+            grows = "true" if _is_tall(of) else "false"
             return (
-                f'<mrow><mo stretchy="true" form="prefix">{_text(left)}</mo>{_write(of)}'
-                f'<mo stretchy="true" form="postfix">{_text(right)}</mo></mrow>'
+                f'<mrow><mo stretchy="{grows}" form="prefix">{_text(left)}</mo>{_write(of)}'
+                f'<mo stretchy="{grows}" form="postfix">{_text(right)}</mo></mrow>'
             )
     return _write_token(math)
 
 
-def _write_token(math: Math) -> str:
+def _write_token(math: Math) -> str:  # noqa: PLR0911 - one return per kind of node
     match math:
         case Letter(text):
             return f"<mi>{_text(text)}</mi>"

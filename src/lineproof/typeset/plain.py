@@ -49,7 +49,9 @@ def _write(math: Math) -> str:
     return _write_token(math)
 
 
-def _write_token(math: Math) -> str:
+def _write_token(  # noqa: C901, PLR0911 - one return per kind of node
+    math: Math,
+) -> str:
     match math:
         case Letter(text) | Word(text):
             return "".join(_NAMES.get(c, c) for c in printable(text))

@@ -52,9 +52,9 @@ class PrintedTable:
 class PrintedRow:
     """One entry, ready to be laid out.
 
-    ``inputs`` are the values that a procedure was given, ``chains`` hold the working, ``result`` the last piece ("M_r = 551 kN·m"), ``verdict`` the
-    word for a check or decision, ``ratio`` its printed utilisation, ``remarks`` short sentences
-    in small print (source, basis, empirical numbers as text).
+    ``inputs`` are the values that a procedure was given, ``chains`` hold the working, ``result``
+    the last piece ("M_r = 551 kN·m"), ``verdict`` the word for a check or decision, ``ratio`` its
+    printed utilisation, ``remarks`` short sentences in small print (source, basis, numbers).
     """
 
     id: str

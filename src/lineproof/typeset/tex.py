@@ -65,7 +65,7 @@ def _write(math: Math) -> str:
     return _write_token(math)
 
 
-def _write_token(math: Math) -> str:
+def _write_token(math: Math) -> str:  # noqa: PLR0911 - one return per kind of node
     match math:
         case Letter(text):
             return f"{{\\{_GREEK[text]}}}" if text in _GREEK else text

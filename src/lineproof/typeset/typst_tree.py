@@ -49,7 +49,7 @@ def typst_tree(math: Math) -> TypstTree:
     return _token(math)
 
 
-def _token(math: Math) -> TypstTree:
+def _token(math: Math) -> TypstTree:  # noqa: PLR0911 - one return per kind of node
     match math:
         case Letter(text):
             return ["letter", printable(text)]

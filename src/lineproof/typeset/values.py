@@ -77,10 +77,10 @@ def _integer(text: str) -> Math:
 
 
 def number_text(text: str) -> str:
-    """Return a number text as it is printed in running text and tables.
+    r"""Return a number text as it is printed in running text and tables.
 
     >>> number_text("-12500"), number_text("5.00e9"), number_text("2-25M")
-    ('−12\\u202f500', '5.00 × 10⁹', '2-25M')
+    ('−12\u202f500', '5.00 × 10⁹', '2-25M')
     """
     parts = split_number(text)
     if parts is None:
@@ -124,10 +124,10 @@ def value_math(text: str, unit: str) -> Math:
 
 
 def value_text(text: str, unit: str) -> str:
-    """Return number and unit for running text.
+    r"""Return number and unit for running text.
 
     >>> value_text("551", "kN.m"), value_text("35", "deg")
-    ('551\\u202fkN·m', '35°')
+    ('551\u202fkN·m', '35°')
     """
     space = "" if unit in ("", "deg") else NARROW_SPACE
     return number_text(text) + space + unit_text(unit)

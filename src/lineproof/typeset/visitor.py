@@ -105,7 +105,7 @@ class _Visitor:
         self.leaf = leaf
         self.spaced = spaced
 
-    def visit(self, tree: Tree) -> Piece:
+    def visit(self, tree: Tree) -> Piece:  # noqa: PLR0911 - one return per kind of node
         match tree:
             case Number(text):
                 return _number_piece(text)

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from functools import partial
 
-from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, criterion, formula
+from lineproof.formula import FROM_MEMORY, criterion, formula
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.notation import NOTATION
 from lineproof.standards.references import G30_18_TABLE, MECHANICS
@@ -100,20 +100,38 @@ DEPTH_TWO_LAYERS = _formula(
     clause="2.3",
     basis=MECHANICS,
 )
+TOP_AREA_T = _formula(
+    "A_s = (n_1 + 2*n_o)*A_b",
+    title="Area of the top bars, web and both overhangs",
+    clause="10.5.3.1",
+    basis=MECHANICS,
+)
+TOP_AREA_L = _formula(
+    "A_s = (n_1 + n_o)*A_b",
+    title="Area of the top bars, web and overhang",
+    clause="10.5.3.1",
+    basis=MECHANICS,
+)
+COMPRESSION_AREA = _formula(
+    "A_sp = n_1*A_b",
+    title="Area of the compression bars",
+    clause="G30.18",
+    basis=MECHANICS,
+)
+COMPRESSION_DEPTH = _formula(
+    "d_p = c_c + d_bs + d_b/2",
+    title="Depth to the compression bars",
+    clause="2.3",
+    basis=MECHANICS,
+)
 DEPTH_ONE_LAYER = _formula(
-    "d = d_1", title="Effective depth, one layer", clause="2.3", basis=MECHANICS
+    "d = h - c_c - d_bs - d_b/2", title="Effective depth", clause="2.3", basis=MECHANICS
 )
 AREA_OF_BARS = _formula(
     "A_s = n_b*A_b", title="Area of the bars", clause="G30.18", basis=MECHANICS
 )
-ENOUGH_BARS = _criterion(
-    "2 <= n_b",
-    title="Bars in the corners of the stirrup",
-    clause="A23.1",
-    basis=COMMON_PRACTICE,
-    yes="There is a bar in each corner.",
-    no="Each corner of the stirrup needs a bar: at least two bars.",
-    key="corner-bars",
+TOTAL_AREA = _formula(
+    "A_s = A_s1 + A_s2", title="Area of the bars", clause="G30.18", basis=MECHANICS
 )
 
 FORMULAS = (
@@ -125,6 +143,11 @@ FORMULAS = (
     DEPTH_TWO_LAYERS,
     DEPTH_ONE_LAYER,
     AREA_OF_BARS,
+    TOTAL_AREA,
+    TOP_AREA_T,
+    TOP_AREA_L,
+    COMPRESSION_AREA,
+    COMPRESSION_DEPTH,
 )
-CRITERIA = (FITS, ENOUGH_BARS)
+CRITERIA = (FITS,)
 TABLES = (BARS, STIRRUP_BENDS, GRADES)

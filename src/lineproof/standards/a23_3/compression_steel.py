@@ -59,6 +59,26 @@ M_R_TEE = _formula(
     title="Factored moment resistance with compression bars, flange and web",
     basis=MECHANICS,
 )
+STAYS_IN_FLANGE = _criterion(
+    "phi_s*A_s*f_y <= alpha_1*phi_c*f_c*b*h_f + A_sp*(phi_s*min(f_y,"
+    " E_s*eps_cu*(h_f/beta_1 - d_p)/(h_f/beta_1)) - alpha_1*phi_c*f_c)",
+    clause="10.1.7",
+    unit="kN",
+    title="Whether the block stays in the flange, compression bars counted",
+    basis=MECHANICS,
+    yes="The block stays in the flange: the section acts as a rectangle of width b.",
+    no="The block leaves the flange: flange and web are taken apart.",
+    key="block-in-flange",
+)
+IN_COMPRESSION = _criterion(
+    "d_p <= c",
+    clause="10.1.6",
+    title="Whether the upper bars are in compression",
+    basis=MECHANICS,
+    yes="The upper bars lie above the neutral axis: they are in compression.",
+    no="The upper bars lie below the neutral axis: they are not in compression.",
+    key="upper-bars-in-compression",
+)
 CLOSES = _criterion(
     "abs(alpha_1*phi_c*f_c*b*beta_1*c + A_sp*(phi_s*min(f_y, E_s*eps_cu*(c - d_p)/c)"
     " - alpha_1*phi_c*f_c) - phi_s*A_s*f_y) <= 0.001*phi_s*A_s*f_y",
@@ -90,4 +110,4 @@ FORMULAS = (
     M_R,
     M_R_TEE,
 )
-CRITERIA = (CLOSES, CLOSES_TEE)
+CRITERIA = (STAYS_IN_FLANGE, IN_COMPRESSION, CLOSES, CLOSES_TEE)

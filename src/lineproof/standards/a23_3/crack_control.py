@@ -103,6 +103,40 @@ SKIN_AREA = _formula(
     title="Skin reinforcement, both faces",
     basis=FROM_MEMORY,
 )
+SKIN_SPACING_MOST = 200.0
+"""Largest spacing of skin bars [mm], 10.6.2 (from memory)."""
+
+SKIN_DEPTH = _formula(
+    "d_sk = c_c + d_bs + d_b/2",
+    clause="10.6.2",
+    title="Side face to the centre of the skin bars",
+    basis=FROM_MEMORY,
+)
+SKIN_PROVIDED = _criterion(
+    "A_sk <= 2*n_k*A_bk",
+    clause="10.6.2",
+    title="Skin reinforcement provided",
+    basis=FROM_MEMORY,
+    yes="The skin bars provide the area.",
+    no="The skin bars do NOT provide the area.",
+    key="skin-area",
+)
+SKIN_SPACING = _formula(
+    "s_sk = h_sk/n_k",
+    clause="10.6.2",
+    title="Spacing of the skin bars over the height of the strips",
+    basis=FROM_MEMORY,
+)
+SKIN_CLOSE = _criterion(
+    "s_sk <= 200",
+    clause="10.6.2",
+    title="Spacing of the skin bars",
+    basis=FROM_MEMORY,
+    numbers={"200": "mm"},
+    yes="The skin bars are close enough.",
+    no="The skin bars are NOT close enough.",
+    key="skin-spacing",
+)
 
 FORMULAS = (
     STRESS_ALLOWANCE,
@@ -115,6 +149,8 @@ FORMULAS = (
     SKIN_WIDTH,
     SKIN_STRIPS,
     SKIN_AREA,
+    SKIN_DEPTH,
+    SKIN_SPACING,
 )
-CRITERIA = (CRACKS, NEEDS_SKIN)
+CRITERIA = (CRACKS, NEEDS_SKIN, SKIN_PROVIDED, SKIN_CLOSE)
 TABLES = (LIMITS,)

@@ -11,26 +11,20 @@ from lineproof.standards.references import MECHANICS
 _formula = partial(formula, notation=NOTATION)
 _criterion = partial(criterion, notation=NOTATION)
 
-BLOCK_IN_FLANGE_DEPTH = _formula(
-    "a_1 = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)",
+BLOCK_RECTANGULAR = _formula(
+    "a = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)",
     clause="10.1.7",
-    title="Depth of the block if it stays in the flange",
+    title="Depth of the stress block, width b",
     basis=FROM_MEMORY,
 )
 IN_FLANGE = _criterion(
-    "a_1 <= h_f",
+    "a <= h_f",
     clause="10.1.7",
     title="Where the stress block ends",
     basis=MECHANICS,
     yes="The block stays in the flange: the section acts as a rectangle of width b.",
     no="The block leaves the flange: flange and web are taken apart.",
     key="block-in-flange",
-)
-BLOCK_RECTANGULAR = _formula(
-    "a = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)",
-    clause="10.1.7",
-    title="Depth of the stress block",
-    basis=FROM_MEMORY,
 )
 FLANGE_FORCE = _formula(
     "C_f = alpha_1*phi_c*f_c*(b - b_w)*h_f",
@@ -39,13 +33,16 @@ FLANGE_FORCE = _formula(
     basis=FROM_MEMORY,
 )
 BLOCK_IN_WEB = _formula(
-    "a = (phi_s*A_s*f_y - C_f)/(alpha_1*phi_c*f_c*b_w)",
+    "a_w = (phi_s*A_s*f_y - C_f)/(alpha_1*phi_c*f_c*b_w)",
     clause="10.1.7",
     title="Depth of the stress block, in the web",
     basis=FROM_MEMORY,
 )
 NEUTRAL_AXIS = _formula(
     "c = a/beta_1", clause="10.1.7", title="Depth of the neutral axis", basis=FROM_MEMORY
+)
+NEUTRAL_AXIS_IN_WEB = _formula(
+    "c = a_w/beta_1", clause="10.1.7", title="Depth of the neutral axis", basis=FROM_MEMORY
 )
 M_R_RECTANGULAR = _formula(
     "M_r = phi_s*A_s*f_y*(d - a/2)",
@@ -54,7 +51,7 @@ M_R_RECTANGULAR = _formula(
     basis=MECHANICS,
 )
 M_R_TEE = _formula(
-    "M_r = C_f*(d - h_f/2) + (phi_s*A_s*f_y - C_f)*(d - a/2)",
+    "M_r = C_f*(d - h_f/2) + (phi_s*A_s*f_y - C_f)*(d - a_w/2)",
     clause="10.1",
     title="Factored moment resistance, flange and web",
     basis=MECHANICS,
@@ -142,11 +139,11 @@ ENOUGH_STEEL = _criterion(
 )
 
 FORMULAS = (
-    BLOCK_IN_FLANGE_DEPTH,
     BLOCK_RECTANGULAR,
     FLANGE_FORCE,
     BLOCK_IN_WEB,
     NEUTRAL_AXIS,
+    NEUTRAL_AXIS_IN_WEB,
     M_R_RECTANGULAR,
     M_R_TEE,
     YIELD_LIMIT,

@@ -86,6 +86,16 @@ SPREAD_AREA = _formula(
     title="Least area of top bars in one overhang",
     basis=FROM_MEMORY,
 )
+SPREAD = _criterion(
+    "A_so <= n_o*A_b",
+    unit="mm2",
+    clause="10.5.3.1",
+    title="Top bars spread over the overhang",
+    basis=FROM_MEMORY,
+    yes="The overhang holds the top bars it needs.",
+    no="The overhang does NOT hold the top bars it needs.",
+    key="top-bars-spread",
+)
 
 FORMULAS = (WIDTH_WEB, WIDTH_FLANGE_T, WIDTH_FLANGE_L, A_S_MIN, SPREAD_WIDTH, SPREAD_AREA)
-CRITERIA = (BY_CRACKING, BY_CRACKING_TOP, BY_AREA, WAIVER)
+CRITERIA = (BY_CRACKING, BY_CRACKING_TOP, BY_AREA, WAIVER, SPREAD)

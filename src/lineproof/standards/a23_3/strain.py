@@ -226,6 +226,10 @@ _BAR_FORCE = {
 }
 
 
+LAYERED = tuple(_BAR_FORCE)
+"""Cases whose neutral axis is found a second time; with compression bars it is found in the first."""
+
+
 def _closing(case: str, *, in_flange: bool) -> Criterion:
     concrete, bars = _BLOCK_FORCE[in_flange], _BAR_FORCE[case]
     return _criterion(

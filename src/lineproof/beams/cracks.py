@@ -1,0 +1,60 @@
+"""Crack control and skin reinforcement of clause 10.6."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping
+
+from lineproof.beams.bars import BarLayers
+from lineproof.beams.flexure import midspan
+from lineproof.beams.inputs import FloorBeamInputs
+from lineproof.beams.steps import Steps
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import bars
+from lineproof.standards.a23_3 import crack_control as clause
+
+CRACKS = "crack-control"
+SKIN_BAR = "10M"
+
+
+def record_cracks(sheet: Sheet, inputs: FloorBeamInputs, layers: BarLayers) -> None:
+    """Record z at midspan and the skin reinforcement of deep beams."""
+    steps = midspan(sheet, inputs.shape)
+    kind = "interior" if inputs.exposure == "N" else "exterior"
+    with sheet.part(CRACKS, "Crack control and skin reinforcement"):
+        largest = max(layers, key=lambda layer: layer.diameter)
+        if largest is not layers[0]:
+            steps.bind(A_b=sheet.lookup("A_b", bars.BARS, largest.size))
+        steps.lines(
+            clause.STRESS_ALLOWANCE,
+            clause.D_C,
+            clause.D_S,
+            clause.BAR_COUNT,
+            clause.TENSION_AREA,
+            clause.Z,
+        )
+        sheet.lookup("z_max", clause.LIMITS, kind)
+        steps.check(clause.CRACKS)
+        if steps.decide(clause.NEEDS_SKIN):
+            _record_skin(sheet, steps, kind)
+
+
+def _record_skin(sheet: Sheet, steps: Steps, kind: str) -> None:
+    d_bk = sheet.lookup("d_bk", bars.BARS, SKIN_BAR, "d_b", title="diameter of the skin bars")
+    sheet.lookup("rho_sk", clause.LIMITS, kind)
+    steps.line(clause.SKIN_DEPTH, d_b=d_bk)
+    steps.lines(clause.SKIN_HEIGHT, clause.SKIN_WIDTH, clause.SKIN_STRIPS, clause.SKIN_AREA)
+    A_bk = sheet.lookup("A_bk", bars.BARS, SKIN_BAR, "A_b", title="area of one skin bar")
+    each_face = _bars_each_face(steps.place, A_bk.value)
+    n_k = sheet.given("n_k", str(each_face), "number of skin bars on each face", source="chosen")
+    sheet.check(clause.SKIN_PROVIDED, n_k=n_k, A_bk=A_bk)
+    steps.line(clause.SKIN_SPACING, n_k=n_k)
+    steps.check(clause.SKIN_CLOSE)
+
+
+def _bars_each_face(place: Mapping[str, Entry], area: float) -> int:
+    """Return the bars a face needs for the area and for a spacing of at most 200 mm."""
+    for_area = math.ceil(place["A_sk"].value / 2 / area)
+    for_spacing = math.ceil(place["h_sk"].value / clause.SKIN_SPACING_MOST)
+    return max(for_area, for_spacing, 1)

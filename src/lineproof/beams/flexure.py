@@ -1,0 +1,165 @@
+"""Balanced condition, resistance, reinforcement required: the closed forms and their decisions."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+from lineproof.beams.inputs import Shape
+from lineproof.beams.section import compression_zone
+from lineproof.beams.steps import Steps
+from lineproof.errors import UserError
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import compression_steel as double
+from lineproof.standards.a23_3 import flexure as clause
+from lineproof.standards.a23_3 import strain, stress_block
+from lineproof.standards.codes import CodePair
+
+BALANCED = "balanced"
+REQUIRED = "required-steel"
+FLEXURE = "flexure"
+_LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
+
+
+def midspan(sheet: Sheet, shape: Shape, bars: str = "bars") -> Steps:
+    """Return the steps at midspan: the bars of that part, compression at the top."""
+    entries = sheet.entries_of(bars)
+    place = compression_zone(sheet, shape) | {n: entries[n] for n in _LAYERS if n in entries}
+    return Steps(sheet, place)
+
+
+def record_balanced(sheet: Sheet, shape: Shape) -> None:
+    """Record the balanced state: neutral axis from strains, steel by equilibrium, moment."""
+    steps = midspan(sheet, shape)
+    with sheet.part(BALANCED, "Balanced condition"):
+        balanced(steps, shape)
+
+
+def balanced(steps: Steps, shape: Shape) -> bool:
+    """Record the balanced state inside the open part; tell whether the block stays in the flange."""
+    steps.lines(stress_block.C_BALANCED, stress_block.A_BALANCED)
+    in_flange = shape == "rectangular" or bool(steps.decide(stress_block.BALANCED_IN_FLANGE))
+    if in_flange:
+        steps.lines(
+            stress_block.C_BALANCED_RECTANGULAR,
+            stress_block.A_S_BALANCED,
+            stress_block.M_R_BALANCED_RECTANGULAR,
+        )
+    else:
+        steps.lines(
+            stress_block.C_BALANCED_TEE,
+            stress_block.A_S_BALANCED,
+            stress_block.M_R_BALANCED_TEE,
+        )
+    return in_flange
+
+
+def record_required(sheet: Sheet, shape: Shape) -> None:
+    """Record the reinforcement that the moment requires, and that the bars provide it."""
+    steps = midspan(sheet, shape)
+    steps.bind(M_f=sheet.entry("loads/M_f"))
+    with sheet.part(REQUIRED, "Reinforcement required at midspan"):
+        required(steps, shape)
+        steps.check(clause.ENOUGH_STEEL)
+
+
+def required(steps: Steps, shape: Shape) -> None:
+    """Record inside the open part the steel required for M_f."""
+    if shape != "rectangular":
+        steps.line(clause.M_R_FLANGE_FULL)
+        if not steps.decide(clause.NEEDS_FLANGE_ONLY):
+            steps.lines(
+                clause.FLANGE_FORCE,
+                clause.WEB_MOMENT,
+                clause.BLOCK_REQUIRED_WEB,
+                clause.A_S_REQUIRED_WEB,
+            )
+            return
+    steps.lines(clause.BLOCK_REQUIRED, clause.A_S_REQUIRED)
+
+
+def record_flexure(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
+    """Record the resistance of the bars, yield and strength."""
+    steps = midspan(sheet, shape)
+    steps.bind(M_f=sheet.entry("loads/M_f"))
+    with sheet.part(FLEXURE, "Moment resistance at midspan"):
+        resistance(steps, shape)
+        record_yield(steps, pair)
+        steps.check(clause.STRENGTH)
+
+
+def resistance(steps: Steps, shape: Shape) -> Entry:
+    """Record inside the open part the block, the neutral axis and M_r; return M_r."""
+    steps.line(clause.BLOCK_RECTANGULAR)
+    if shape == "rectangular" or steps.decide(clause.IN_FLANGE):
+        steps.line(clause.NEUTRAL_AXIS)
+        return steps.line(clause.M_R_RECTANGULAR)
+    steps.lines(clause.FLANGE_FORCE, clause.BLOCK_IN_WEB, clause.NEUTRAL_AXIS_IN_WEB)
+    return steps.line(clause.M_R_TEE)
+
+
+def record_yield(steps: Steps, pair: CodePair) -> None:
+    """Record the limit of c/d and the check against it inside the open part.
+
+    An edition that changed the clause uses the value its office confirmed, if there is one.
+    """
+    value = confirmed_value(steps.sheet.project, pair)
+    if value is None:
+        steps.line(clause.YIELD_LIMIT)
+    else:
+        c_d = steps.sheet.given(
+            "c_d", str(value["value"]), source=f"{pair.concrete}, 10.5.2, confirmed by "
+            f"{value.get('by', '')}, {value.get('on', '')}", clause="10.5.2",
+        )  # fmt: skip
+        steps.bind(c_d=c_d)
+    steps.check(clause.YIELDS)
+
+
+def confirmed_value(project: Mapping[str, Any], pair: CodePair) -> Mapping[str, Any] | None:
+    """Return the office's confirmed value of 10.5.2 for an edition that changed it."""
+    if not any(number == "10.5.2" for number, _ in pair.changed):
+        return None
+    for row in project.get("confirmed", ()):
+        if row.get("clause") == "10.5.2" and row.get("edition") == pair.concrete and "value" in row:
+            return dict(row)
+    return None
+
+
+def record_doubly(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
+    """Record the resistance with the compression bars counted, displaced concrete taken off."""
+    steps = midspan(sheet, shape)
+    top = {n: sheet.entry(f"compression-bars/{n}") for n in ("A_sp", "d_p")}
+    steps.bind(M_f=sheet.entry("loads/M_f"), **top)
+    with sheet.part(FLEXURE, "Moment resistance at midspan, compression bars counted"):
+        doubly(steps, shape)
+        sheet.note(
+            "ties",
+            "Bars counted in compression are tied as 7.6.5 asks; the concrete they displace is "
+            "taken off.",
+            title="Compression bars",
+            clause="7.6.5",
+            basis="from memory",
+        )
+        record_yield(steps, pair)
+        steps.check(clause.STRENGTH)
+
+
+def doubly(steps: Steps, shape: Shape) -> Entry:
+    """Record inside the open part neutral axis, forces and M_r with compression bars."""
+    in_flange = shape == "rectangular" or bool(steps.decide(double.STAYS_IN_FLANGE))
+    closing = double.CLOSES if in_flange else double.CLOSES_TEE
+    steps.found(
+        "c", strain.AXIS["compression bars"], closing, unit="mm", clause="10.1.2",
+        title="Depth of the neutral axis, by equilibrium",
+    )  # fmt: skip
+    if not steps.decide(double.IN_COMPRESSION):
+        raise UserError(
+            "compression_bars: they lie below the neutral axis and are not in compression; "
+            "leave them out: compression_bars = None"
+        )
+    steps.lines(double.STRESS, double.FORCE, double.BLOCK)
+    if not in_flange:
+        return steps.line(double.M_R_TEE)
+    steps.line(double.CONCRETE_FORCE)
+    return steps.line(double.M_R)

@@ -1,0 +1,276 @@
+"""One simply supported floor beam, from its loads to its bars: each call records parts."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from lineproof.beams import basics, choice, loading
+from lineproof.beams.bars import BarLayer, BarLayers, bars_text
+from lineproof.beams.capacity import record_capacity
+from lineproof.beams.cracks import CRACKS, record_cracks
+from lineproof.beams.flexure import (
+    BALANCED,
+    FLEXURE,
+    REQUIRED,
+    midspan,
+    record_balanced,
+    record_doubly,
+    record_flexure,
+    record_required,
+)
+from lineproof.beams.inputs import FloorBeamInputs, read_floor_beam
+from lineproof.beams.layout import BARS, record_bars, refuse_unfit
+from lineproof.beams.minimum_steel import MINIMUM, record_minimum
+from lineproof.beams.pictures import moment_level, record_section_figure, record_strain_figure
+from lineproof.beams.second_path import SECOND_PATH, record_second_path
+from lineproof.beams.section import SECTION, record_section
+from lineproof.beams.steps import Steps
+from lineproof.beams.top_steel import TOP_STEEL, record_free_ends, record_top_steel
+from lineproof.quantity import QuantityInput
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import bars as bar_clause
+from lineproof.standards.catalogue import NOTATION
+from lineproof.standards.codes import CodePair
+
+SCOPE = "preliminary: flexure only"
+NOT_COVERED = (
+    {"check": "Shear and stirrups", "clause": "11.3"},
+    {"check": "Torsion", "clause": "11.3.10"},
+    {"check": "Deflection", "clause": "9.8"},
+    {"check": "Development, cut-off and laps of bars", "clause": "12"},
+    {"check": "Bearing at the supports", "clause": "10.8"},
+    {"check": "Shear between flange and web", "clause": "11.5"},
+    {"check": "Crack control of the top bars at the ends", "clause": "10.6.1"},
+)
+_CALLS = {
+    basics.GIVEN: "floor_beam(...)",
+    basics.MATERIALS: "floor_beam(...)",
+    loading.LOADS: "beam.loads()",
+    SECTION: "beam.section()",
+    BARS: "beam.bars()",
+    basics.COVER: "beam.bars()",
+    REQUIRED: "beam.flexure()",
+    FLEXURE: "beam.flexure()",
+    BALANCED: "beam.balanced()",
+    SECOND_PATH: "beam.second_path()",
+    MINIMUM: "beam.minimum_steel()",
+    TOP_STEEL: "beam.top_steel()",
+    CRACKS: "beam.crack_control()",
+    "summary": "beam.summary()",
+}
+
+
+class FloorBeam:
+    """One simply supported floor beam on a sheet.
+
+    It keeps nothing but the sheet, the checked inputs and the code pair: every number stands on
+    the sheet, so that cells may be run again in any order.
+    """
+
+    def __init__(self, sheet: Sheet, inputs: FloorBeamInputs, pair: CodePair) -> None:
+        self.sheet, self.inputs, self.pair = sheet, inputs, pair
+
+    def loads(self) -> None:
+        """Record the load take-down, the factored load and the moment."""
+        loading.record_loads(self.sheet, self.inputs)
+
+    def section(self) -> None:
+        """Record the effective flange, the gross section and the cracking moments."""
+        record_section(self.sheet, self.inputs.shape)
+
+    def bars(self) -> None:
+        """Record bottom bars, as given or chosen, the effective depth and the cover."""
+        for needed in ("loads/M_f", "section/I_g"):
+            self.sheet.entry(needed)
+        layers = self.inputs.bottom_bars
+        if layers is None:
+            layers = choice.first_that_holds(
+                self.sheet, self._plausible(), self._try_bottom, "bottom_bars"
+            )
+        self._record_bars(self.sheet, layers)
+        if self.inputs.bottom_bars is not None:
+            refuse_unfit(self.sheet, layers, "bottom_bars")
+
+    def _record_bars(self, sheet: Sheet, layers: BarLayers) -> None:
+        record_bars(
+            sheet, layers, stirrup=self.inputs.stirrup, chosen=self.inputs.bottom_bars is None
+        )
+        basics.record_cover(sheet, self.inputs)
+        if self.inputs.compression_bars is not None:
+            self._record_compression_bars(sheet, self.inputs.compression_bars[0])
+
+    def _record_compression_bars(self, sheet: Sheet, layer: BarLayer) -> None:
+        with sheet.part("compression-bars", "Compression bars, counted at midspan"):
+            steps = Steps(sheet, {"d_bs": sheet.entry("bars/d_bs")})
+            steps.bind(
+                d_b=sheet.lookup("d_b", bar_clause.BARS, layer.size),
+                A_b=sheet.lookup("A_b", bar_clause.BARS, layer.size),
+                n_1=sheet.given("n_1", str(layer.number), "number of compression bars"),
+            )
+            steps.lines(bar_clause.COMPRESSION_AREA, bar_clause.COMPRESSION_DEPTH)
+
+    def _plausible(self) -> list[BarLayers]:
+        """Leave out layouts that cannot carry the moment even with the whole depth as lever arm."""
+        find = self.sheet.find
+        least = self.sheet.entry("loads/M_f").value / (
+            find("phi_s").value * find("f_y").value * find("h").value
+        )
+        return [
+            layers
+            for layers in choice.bottom_candidates()
+            if sum(layer.area for layer in layers) >= least
+        ]
+
+    def _try_bottom(self, trial: Sheet, layers: BarLayers) -> None:
+        self._record_bars(trial, layers)
+        if choice.failed_check(list(trial.parts)[-3:]) is not None:
+            return
+        self._record_flexure(trial)
+        record_minimum(trial, self.inputs.shape, self.inputs.minimum_rule)
+        record_cracks(trial, self.inputs, layers)
+
+    def _record_flexure(self, sheet: Sheet) -> None:
+        if self.inputs.compression_bars is not None:
+            record_doubly(sheet, self.inputs.shape, self.pair)
+        else:
+            record_required(sheet, self.inputs.shape)
+            record_flexure(sheet, self.inputs.shape, self.pair)
+
+    def balanced(self) -> None:
+        """Record the balanced condition: neutral axis, steel and moment."""
+        record_balanced(self.sheet, self.inputs.shape)
+
+    def flexure(self) -> None:
+        """Record the steel required, the resistance at midspan and its checks."""
+        self._record_flexure(self.sheet)
+
+    def second_path(self) -> None:
+        """Record the proofs of the resistances by layers and strains."""
+        record_second_path(self.sheet, self.inputs.shape)
+
+    def minimum_steel(self) -> None:
+        """Record the minimum reinforcement at midspan."""
+        record_minimum(self.sheet, self.inputs.shape, self.inputs.minimum_rule)
+
+    def top_steel(self) -> None:
+        """Record the top bars at the ends for the restraint that exists."""
+        if self.inputs.ends == "free":
+            record_free_ends(self.sheet)
+            return
+        given = self.inputs.top_bars
+        area = self._spread_area()
+        if given is not None:
+            candidates = [(given[0], choice.bars_for(area, given[0].size))]
+            web, overhang = candidates[0]
+        else:
+            web, overhang = choice.first_that_holds(
+                self.sheet, choice.top_candidates(area), self._try_top, "top_bars"
+            )
+        record_top_steel(self.sheet, self.inputs, self.pair, web, overhang)
+
+    def _spread_area(self) -> float:
+        if not self.inputs.slab:
+            return 0.0
+        width = min(self.sheet.entry("section/b_o").value, self.sheet.entry("given/l").value / 20)
+        return 0.004 * width * self.sheet.entry("given/h_f").value
+
+    def _try_top(self, trial: Sheet, candidate: tuple[BarLayer, int]) -> None:
+        web, overhang = candidate
+        record_top_steel(trial, self.inputs, self.pair, web, overhang, proof=False)
+
+    def crack_control(self) -> None:
+        """Record crack control at midspan and the skin reinforcement."""
+        record_cracks(self.sheet, self.inputs, self._layers())
+
+    def summary(self) -> None:
+        """Record the section with its bars, the strains at the resistance and the capacity curve."""
+        sheet, shape = self.sheet, self.inputs.shape
+        layers = self._layers()
+        M_r = sheet.entry(f"{FLEXURE}/M_r")
+        with sheet.part("summary", "Section and state at the resistance"):
+            record_section_figure(sheet, shape, layers, self.inputs.stirrup, self._top_layer())
+            record_strain_figure(sheet, shape, layers)
+        if self.inputs.compression_bars is None:
+            A_s = midspan(sheet, shape).place["A_s"]
+            levels = [
+                moment_level(sheet.entry("loads/M_f"), "f", "factored moment", "long"),
+                moment_level(sheet.entry("section/M_cr"), "cr", "cracking moment", "dotted"),
+            ]
+            record_capacity(sheet, shape, (A_s, M_r), bars_text(layers), levels, tabulate=False)
+
+    def _layers(self) -> BarLayers:
+        """Return the bottom bars as they stand on the sheet."""
+        return layers_on(self.sheet)
+
+    def _top_layer(self) -> BarLayer:
+        entries = self.sheet.entries_of(TOP_STEEL)
+        if "n_1" not in entries:
+            return BarLayer(2, "15M")
+        return BarLayer(round(entries["n_1"].value), entries["d_b"].source.row)
+
+
+def layers_on(sheet: Sheet) -> BarLayers:
+    """Return the bottom bars as they stand on the sheet."""
+    entries = sheet.entries_of(BARS)
+    rows = [(n, d) for n, d in (("n_1", "d_b"), ("n_2", "d_b2")) if n in entries]
+    return tuple(BarLayer(round(entries[n].value), entries[d].source.row) for n, d in rows)
+
+
+def floor_beam(
+    sheet: Sheet,
+    *,
+    span: QuantityInput,
+    spacing: QuantityInput,
+    b_w: QuantityInput,
+    h: QuantityInput,
+    h_f: QuantityInput | None,
+    f_c: QuantityInput,
+    grade: str,
+    superimposed: QuantityInput,
+    use: str,
+    exposure: str,
+    fire_rating: QuantityInput,
+    cover: QuantityInput,
+    shape: str = "T",
+    tributary_width: QuantityInput | None = None,
+    live_load: QuantityInput | None = None,
+    density: str = "normal",
+    gamma_c: QuantityInput = "2400 kg/m3",
+    aggregate: QuantityInput = "20 mm",
+    fire_aggregate: str = "S",
+    stirrup: str = "10M",
+    ends: str = "cast with a girder",
+    bottom_bars: str | None = None,
+    compression_bars: str | None = None,
+    top_bars: str | None = None,
+    minimum_rule: str = "10.5.1.2",
+    web_openings: str = "none",
+) -> FloorBeam:
+    """Start a simply supported floor beam: check all inputs, record them and the materials.
+
+    Quantities are typed with their unit. ``bottom_bars`` and ``top_bars`` left out are chosen.
+    ``shape`` is T, L or rectangular; ``ends`` free, cast with a girder, or cast with a column.
+    Raises :class:`UserError` with every fault at once, before anything is recorded.
+    """
+    given: dict[str, Any] = dict(locals())
+    inputs, pair = read_floor_beam(given, sheet.project)
+    return _start(sheet, inputs, pair)
+
+
+def _start(sheet: Sheet, inputs: FloorBeamInputs, pair: CodePair) -> FloorBeam:
+    prepare(sheet, pair)
+    sheet.member = f"floor beam, one simple span, {inputs.shape} section"
+    sheet.scope = SCOPE
+    sheet.not_covered = [dict(row) for row in NOT_COVERED]
+    sheet.expected = dict(_CALLS)
+    if inputs.compression_bars is not None:
+        del sheet.expected[REQUIRED]
+    basics.record_given(sheet, inputs)
+    basics.record_materials(sheet, inputs.density, inputs.grade, pair)
+    return FloorBeam(sheet, inputs, pair)
+
+
+def prepare(sheet: Sheet, pair: CodePair) -> None:
+    """Give the sheet the catalogue's notation and the names of the codes."""
+    sheet.notation = NOTATION | sheet.notation
+    sheet.codes = {"pair": pair.name, "building": pair.building, "concrete": pair.concrete}

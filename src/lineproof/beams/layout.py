@@ -1,0 +1,69 @@
+"""Bars in the section: fit within the layer, distance of layers, effective depth."""
+
+from __future__ import annotations
+
+from lineproof.beams.bars import BarLayers, bars_text
+from lineproof.errors import UserError
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import bars
+
+BARS = "bars"
+
+
+def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) -> Entry:
+    """Record bottom bars in one or two layers and the effective depth; return the depth.
+
+    ``chosen`` tells whether the bars were proposed here or given by the designer. Whether they
+    fit is the last check of each layer.
+    """
+    origin = "chosen: fewest sizes, then least mass" if chosen else "given"
+    with sheet.part(BARS, "Bottom bars and effective depth"):
+        sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.", title="Bars")
+        first = layers[0]
+        sheet.lookup("d_bs", bars.BARS, stirrup, "d_b")
+        sheet.lookup("r_s", bars.STIRRUP_BENDS, stirrup)
+        d_b = sheet.lookup("d_b", bars.BARS, first.size)
+        A_b = sheet.lookup("A_b", bars.BARS, first.size)
+        n_1 = sheet.given("n_1", str(first.number), source=origin)
+        s_min = sheet.line(bars.LEAST_CLEAR)
+        s_c = sheet.line(bars.CLEAR, n_b=n_1)
+        sheet.check(bars.FITS)
+        A_s1 = sheet.line(bars.AREA_OF_BARS, symbol="A_s1" if len(layers) > 1 else "", n_b=n_1)
+        if len(layers) == 1:
+            return sheet.line(bars.DEPTH_ONE_LAYER)
+        d_1 = sheet.line(bars.DEPTH_FIRST)
+        return _record_second_layer(sheet, layers, origin, (d_b, A_b, s_min, s_c, A_s1, d_1))
+
+
+def _record_second_layer(
+    sheet: Sheet, layers: BarLayers, origin: str, first: tuple[Entry, ...]
+) -> Entry:
+    second = layers[1]
+    d_b2 = sheet.lookup("d_b2", bars.BARS, second.size, "d_b")
+    A_b2 = sheet.lookup("A_b2", bars.BARS, second.size, "A_b", title="area of one bar, layer 2")
+    n_2 = sheet.given("n_2", str(second.number), source=origin)
+    thicker = d_b2 if second.diameter > layers[0].diameter else first[0]
+    least = sheet.line(bars.LEAST_CLEAR, symbol="s_min2", d_b=d_b2)
+    clear = sheet.line(bars.CLEAR, symbol="s_c2", n_b=n_2, d_b=d_b2)
+    sheet.check(bars.FITS, key="bars-fit-2", s_min=least, s_c=clear)
+    sheet.line(bars.LAYER_DISTANCE, d_b=thicker)
+    sheet.line(bars.DEPTH_SECOND)
+    sheet.line(bars.AREA_OF_BARS, symbol="A_s2", n_b=n_2, A_b=A_b2)
+    sheet.line(bars.TOTAL_AREA)
+    return sheet.line(bars.DEPTH_TWO_LAYERS)
+
+
+def refuse_unfit(sheet: Sheet, layers: BarLayers, name: str) -> None:
+    """Raise :class:`UserError` if given bars do not fit into the web."""
+    entries = sheet.entries_of(BARS)
+    for key, layer in zip(("bars-fit", "bars-fit-2"), layers, strict=False):
+        check = entries[key]
+        if not check:
+            least, clear = check.value
+            width = sheet.entry("given/b_w").value
+            raise UserError(
+                f"{name}: {bars_text(layers)!r}: {layer} do not fit into a web of {width:g} mm "
+                f"(clear distance {clear:.0f} mm, at least {least:.0f} mm); write fewer or larger "
+                "bars, two layers such as '4-25M / 2-25M', or a wider web"
+            )

@@ -1,0 +1,125 @@
+"""Figures of the beam from recorded entries."""
+
+from __future__ import annotations
+
+from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.figures import (
+    BarRow,
+    Force,
+    MomentLevel,
+    SectionShape,
+    StressState,
+    capacity_figure,
+    section_figure,
+    strain_stress_figure,
+)
+from lineproof.beams.inputs import Shape
+from lineproof.drawing import Dash, Figure, Runs, symbol, to_json
+from lineproof.record import Entry
+from lineproof.record.printing import in_unit
+from lineproof.sheet import Sheet
+
+LEVER_ARM: Runs = (*symbol("d"), (" − ", "roman"), *symbol("a"), ("/2", "roman"))
+LEVER_ARM_FLANGE: Runs = (*symbol("d"), (" − ", "roman"), *symbol("h", "f"), ("/2", "roman"))
+
+
+def section_shape(sheet: Sheet, shape: Shape) -> SectionShape:
+    """Return the concrete outline from the recorded sizes [mm]."""
+    b_w, h = sheet.find("b_w").value, sheet.find("h").value
+    if shape == "rectangular":
+        return SectionShape("rectangle", b_w, h)
+    kind = "T" if shape == "T" else "L"
+    return SectionShape(kind, b_w, h, sheet.find("b_f").value, sheet.find("h_f").value)
+
+
+def bottom_rows(bars: dict[str, Entry], layers: BarLayers) -> list[BarRow]:
+    """Return the rows of bottom bars, outermost first."""
+    depths = [bars[name].value for name in ("d_1", "d_2") if name in bars] or [bars["d"].value]
+    return [
+        BarRow(layer.number, layer.diameter, depth, str(layer))
+        for layer, depth in zip(layers, depths, strict=False)
+    ]
+
+
+def record_section_figure(
+    sheet: Sheet, shape: Shape, layers: BarLayers, stirrup: str, top: BarLayer | None
+) -> None:
+    """Record the section to scale with its bars inside the open part."""
+    bars = sheet.entries_of("bars")
+    cover, d_bs = sheet.entry("given/c_c"), bars["d_bs"]
+    rows = []
+    if top is not None:
+        depth = cover.value + d_bs.value + top.diameter / 2
+        rows = [BarRow(top.number, top.diameter, depth, str(top))]
+    figure = section_figure(
+        section_shape(sheet, shape),
+        d=bars["d"].value,
+        cover=cover.value,
+        stirrup_diameter=d_bs.value,
+        stirrup_label=f"{stirrup} stirrups",
+        bottom=bottom_rows(bars, layers),
+        top=rows,
+        caption="Section with bars, to scale",
+    )
+    _record(sheet, "section", figure, [cover, *bars.values()])
+
+
+def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
+    """Record strains and stresses at the resistance inside the open part."""
+    bars, flexure = sheet.entries_of("bars"), sheet.entries_of("flexure")
+    c, d = flexure["c"].value, bars["d"].value
+    block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
+    a, eps_cu = block.value, sheet.find("eps_cu").value
+    tension = sheet.find("phi_s").value * bars["A_s"].value * sheet.find("f_y").value
+    strain = eps_cu * (d - c) / c
+    h_f = sheet.find("h_f").value if shape != "rectangular" else 0.0
+    forces = [Force(_force_label("C", "", tension), a / 2, LEVER_ARM)]
+    if "C_f" in flexure:
+        C_f = flexure["C_f"].value
+        forces = [
+            Force(_force_label("C", "f", C_f), h_f / 2, LEVER_ARM_FLANGE),
+            Force(_force_label("C", "w", tension - C_f), a / 2, LEVER_ARM),
+        ]
+    figure = strain_stress_figure(
+        section_shape(sheet, shape),
+        StressState(d, c, a, eps_cu, strain, in_unit(strain, "", 3)),
+        compression=forces,
+        tension=Force(_force_label("T", "", tension), d),
+        rows=bottom_rows(bars, layers),
+        edge=sheet.entry("given/c_c").value + bars["d_bs"].value,
+    )
+    _record(sheet, "strains", figure, [flexure["c"], flexure["M_r"], bars["A_s"], bars["d"]])
+
+
+def _force_label(base: str, sub: str, force: float) -> Runs:
+    return (*symbol(base, sub), (f" = {in_unit(force, 'kN', 3)} kN", "roman"))
+
+
+def moment_level(M: Entry, sub: str, name: str, dash: Dash) -> MomentLevel:
+    """Return a recorded moment as a level of the capacity figure."""
+    label = (*symbol("M", sub), (f" = {in_unit(M.value, 'kN.m', 3)} kN·m", "roman"))
+    return MomentLevel(M.value / 1e6, label, name, dash)
+
+
+def record_capacity_figure(
+    sheet: Sheet,
+    points: list[tuple[float, float]],
+    chosen: tuple[float, float],
+    label: str,
+    levels: list[MomentLevel],
+    rests_on: list[Entry],
+) -> None:
+    """Record the capacity curve inside the open part; moments of the points in N.mm."""
+    figure = capacity_figure(
+        [(ratio, value / 1e6) for ratio, value in points],
+        (chosen[0], chosen[1] / 1e6),
+        ((f"{label}: {in_unit(chosen[1], 'kN.m', 3)} kN·m", "roman"),),
+        levels,
+        caption="Moment resistance against reinforcement, as a share of the balanced reinforcement",
+    )
+    _record(sheet, "capacity", figure, rests_on)
+
+
+def _record(sheet: Sheet, key: str, figure: Figure, rests_on: list[Entry]) -> None:
+    values = [entry for entry in rests_on if entry.value is not None and not isinstance(entry.value, tuple)]
+    sheet.figure(key, to_json(figure), title=figure.caption, alt=figure.alt, rests_on=values)

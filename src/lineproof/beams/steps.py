@@ -1,0 +1,70 @@
+"""Recording steps with the entries that a place of the beam stands for."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+
+from lineproof.formula import Criterion, Formula
+from lineproof.record import Entry, Procedure
+from lineproof.sheet import Sheet
+
+
+def only(bound: Mapping[str, Entry], names: Iterable[str]) -> dict[str, Entry]:
+    """Return the bindings that are among the names."""
+    return {name: bound[name] for name in names if name in bound}
+
+
+class Steps:
+    """Records lines at one place of a beam (midspan, an end).
+
+    ``place`` holds what the symbols stand for there (``d``, ``A_s``, ``b``, ...); symbols recorded
+    in the open part come before it.
+    """
+
+    def __init__(self, sheet: Sheet, place: Mapping[str, Entry]) -> None:
+        self.sheet, self.place = sheet, dict(place)
+
+    def bind(self, **entries: Entry) -> None:
+        """Let symbols stand for these entries from here on."""
+        self.place.update(entries)
+
+    def line(self, formula: Formula, symbol: str = "", **bound: Entry) -> Entry:
+        """Record a formula; what it gives stands for its symbol from here on."""
+        args = only(self.place | bound, formula.names)
+        made = self.sheet.line(formula, symbol=symbol, **args)
+        self.place[symbol or formula.symbol] = made
+        return made
+
+    def lines(self, *formulas: Formula) -> None:
+        """Record several formulas one after the other."""
+        for formula in formulas:
+            self.line(formula)
+
+    def decide(self, test: Criterion, **bound: Entry) -> Entry:
+        """Record a decision."""
+        return self.sheet.decide(test, **only(self.place | bound, test.names))
+
+    def check(self, test: Criterion, key: str = "", **bound: Entry) -> Entry:
+        """Record a check."""
+        return self.sheet.check(test, key=key, **only(self.place | bound, test.names))
+
+    def found(
+        self,
+        symbol: str,
+        procedure: Procedure,
+        closing: Criterion,
+        *,
+        unit: str,
+        title: str,
+        clause: str,
+        settings: Mapping[str, float] | None = None,
+    ) -> Entry:
+        """Record a found value with its closing criterion."""
+        names = dict.fromkeys((*procedure.names, *closing.names))
+        args = only(self.place, (name for name in names if name != symbol))
+        made = self.sheet.found(
+            symbol, procedure, closing, unit=unit, title=title, clause=clause,
+            settings=settings, **args,
+        )  # fmt: skip
+        self.place[symbol] = made
+        return made

@@ -1,0 +1,95 @@
+"""Top steel at nominally simple ends, for the restraint that exists."""
+
+from __future__ import annotations
+
+from lineproof.beams.bars import BarLayer, bars_text
+from lineproof.beams.flexure import record_yield, required, resistance
+from lineproof.beams.inputs import FloorBeamInputs, Shape
+from lineproof.beams.minimum_steel import minimum_of
+from lineproof.beams.second_path import record_proof
+from lineproof.beams.steps import Steps
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import bars, minimum
+from lineproof.standards.a23_3 import flexure as clause
+from lineproof.standards.codes import CodePair
+from lineproof.standards.nbc import loads
+
+TOP_STEEL = "top-steel"
+TITLE = "Top bars at the ends"
+_WIDTHS = {
+    "T": minimum.WIDTH_FLANGE_T,
+    "L": minimum.WIDTH_FLANGE_L,
+    "rectangular": minimum.WIDTH_WEB,
+}
+_AREAS = {"T": bars.TOP_AREA_T, "L": bars.TOP_AREA_L, "rectangular": bars.AREA_OF_BARS}
+
+
+def record_free_ends(sheet: Sheet) -> None:
+    """Record that free ends need no top steel for a moment."""
+    with sheet.part(TOP_STEEL, TITLE):
+        sheet.note(
+            "free-ends",
+            "The ends rest freely: no moment arises there; two top bars hold the stirrups.",
+            title="Ends",
+            basis="common practice",
+        )
+
+
+def record_top_steel(
+    sheet: Sheet,
+    inputs: FloorBeamInputs,
+    pair: CodePair,
+    web: BarLayer,
+    overhang: int,
+    *,
+    proof: bool = True,
+) -> None:
+    """Record top bars, ``web`` within the web and ``overhang`` in each overhang, for the end moment.
+
+    The compression zone is the web: b = b_w, whatever the flange.
+    """
+    shape = inputs.shape
+    with sheet.part(TOP_STEEL, TITLE):
+        steps = _start(sheet, inputs, web, overhang)
+        required(steps, "rectangular")
+        steps.check(clause.ENOUGH_STEEL)
+        M_r = resistance(steps, "rectangular")
+        record_yield(steps, pair)
+        steps.check(clause.STRENGTH)
+        minimum_of(steps, inputs.minimum_rule, minimum.BY_CRACKING_TOP, _WIDTHS[shape])
+        if proof:
+            record_proof(steps, "one layer", M_r, in_flange=True)
+        if shape != "rectangular":
+            steps.bind(h_f=sheet.entry("given/h_f"))
+            steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
+            steps.check(minimum.SPREAD)
+
+
+def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) -> Steps:
+    b_w, h = sheet.entry("given/b_w"), sheet.entry("given/h")
+    steps = Steps(sheet, {"b": b_w, "b_w": b_w, "h_f": h})
+    sheet.note("bars-text", _text(inputs.shape, web, overhang), title="Bars")
+    steps.line(loads.MOMENT_END_GIRDER if inputs.ends.endswith("girder") else loads.MOMENT_END_COLUMN)
+    entries = {
+        "d_bs": sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b"),
+        "r_s": sheet.lookup("r_s", bars.STIRRUP_BENDS, inputs.stirrup),
+        "d_b": sheet.lookup("d_b", bars.BARS, web.size),
+        "A_b": sheet.lookup("A_b", bars.BARS, web.size),
+        "n_b": sheet.given("n_1", str(web.number), "number of top bars within the web"),
+    }
+    entries["n_1"] = entries["n_b"]
+    if inputs.shape != "rectangular":
+        entries["n_o"] = sheet.given("n_o", str(overhang))
+    steps.bind(**entries)
+    steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
+    steps.check(bars.FITS)
+    steps.lines(_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
+    return steps
+
+
+def _text(shape: Shape, web: BarLayer, overhang: int) -> str:
+    inside = f"Top bars: {bars_text((web,))} within the web"
+    if shape == "rectangular" or not overhang:
+        return f"{inside}."
+    sides = "each overhang" if shape == "T" else "the overhang"
+    return f"{inside}, {overhang}-{web.size} in {sides}, beside the web."

@@ -1,0 +1,68 @@
+"""Plain JSON data: what may stand in a record at all, before anything is read out of it."""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Mapping
+from typing import Any
+
+from lineproof.errors import UserError
+
+DEEPEST = 60
+LARGEST_INTEGER = 2**53
+_NUMBER_TEXT = re.compile(r"-?(?:0|[1-9][0-9]{0,29})(?:\.[0-9]{1,40})?(?:e-?[0-9]{1,3})?\Z")
+
+
+def check_plain(data: object) -> None:
+    """Refuse what JSON text could not hold and give back: NaN, lone surrogates, deep nesting."""
+    waiting: list[tuple[object, int]] = [(data, 0)]
+    while waiting:
+        value, depth = waiting.pop()
+        if depth > DEEPEST:
+            raise UserError(f"record: nested more than {DEEPEST} deep")
+        if isinstance(value, dict):
+            waiting.extend((key if isinstance(key, str) else object(), depth) for key in value)
+            waiting.extend((item, depth + 1) for item in value.values())
+        elif isinstance(value, list):
+            waiting.extend((item, depth + 1) for item in value)
+        elif not _is_plain(value):
+            raise UserError(f"record: {shown(value)} is neither text nor a finite number")
+
+
+def _is_plain(value: object) -> bool:
+    if isinstance(value, str):
+        return not any("\ud800" <= ch <= "\udfff" for ch in value) if not value.isascii() else True
+    if isinstance(value, int):
+        return abs(value) <= LARGEST_INTEGER
+    return value is None or (isinstance(value, float) and math.isfinite(value))
+
+
+def shown(value: object) -> str:
+    """Return a short form of a value for an error."""
+    if isinstance(value, int | float | str) and not isinstance(value, bool):
+        big = isinstance(value, int) and abs(value) > LARGEST_INTEGER
+        return "a very large integer" if big else ascii(value)[:60]
+    return f"a {type(value).__name__}"
+
+
+def is_number(value: object) -> bool:
+    """Tell whether a value of plain data is a number."""
+    return isinstance(value, int | float) and not isinstance(value, bool)
+
+
+def is_number_text(value: object) -> bool:
+    """Tell whether a value is a printed number.
+
+    >>> is_number_text("-12.5"), is_number_text("5.00e9"), is_number_text("1 000")
+    (True, True, False)
+    """
+    return isinstance(value, str) and _NUMBER_TEXT.match(value) is not None
+
+
+def need(row: Mapping[str, Any], what: str, /, **kinds: type) -> None:
+    """Refuse a row without the named fields of these kinds."""
+    for name, kind in kinds.items():
+        value = row.get(name)
+        if not isinstance(value, kind) or (kind is not bool and isinstance(value, bool)):
+            raise UserError(f"record: {what}: {name!r} is missing or not a {kind.__name__}")

@@ -1,0 +1,276 @@
+"""Checking the form of a record: every field that a reader relies on, and nothing run."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+from lineproof.errors import FaultList, UserError
+from lineproof.formula import names_of, parse_criterion, parse_line
+from lineproof.formula.notation import check_id
+from lineproof.quantity.units import UNITS
+from lineproof.record.entry import (
+    CHECK,
+    CRITERIA,
+    DECISION,
+    FIGURE,
+    FOUND,
+    GIVEN,
+    LINE,
+    LOOKUP,
+    NOTE,
+    TABLE,
+    VALUES,
+)
+from lineproof.record.plain_data import check_plain, is_number, is_number_text, need, shown
+
+Data = Mapping[str, Any]
+_KINDS = (*VALUES, *CRITERIA, FIGURE, NOTE, TABLE)
+_LONGEST_ID = 80
+_SYSTEMS = ("N-mm", "kN-m")
+
+
+def check_record(data: Data) -> None:
+    """Raise :class:`UserError` with everything that is wrong with the form of a record."""
+    check_plain(data)
+    need(
+        data, "record", calc=dict, kind_of_member=str, project=dict, codes=dict, notation=list,
+        parts=list, confirm=list, status=dict, digest=str,
+    )  # fmt: skip
+    need(data["calc"], "calc", id=str, title=str)
+    faults = FaultList()
+    entries = _Entries(faults)
+    for part in data["parts"]:
+        entries.check_part(part)
+    for check in (_check_head, _check_tail):
+        try:
+            check(data)
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+
+
+def _check_head(data: Data) -> None:
+    if not all(isinstance(text, str) for text in data["codes"].values()):
+        raise UserError("record: 'codes' holds something else than text")
+    seen = set()
+    for row in data["notation"]:
+        need(
+            _row(row, "notation"), "notation",
+            id=str, base=str, sub=str, sup=str, meaning=str, unit=str,
+        )  # fmt: skip
+        if check_id(row["id"]) in seen or row["unit"] not in UNITS:
+            raise UserError(f"record: notation: {row['id']} stands twice or has no known unit")
+        seen.add(row["id"])
+
+
+def _check_tail(data: Data) -> None:
+    for row in data["confirm"]:
+        need(
+            _row(row, "confirm"), "confirm",
+            clause=str, what=str, basis=str, confirmed=str, lines=list,
+        )  # fmt: skip
+        _texts(row["lines"], "confirm")
+    status = data["status"]
+    need(status, "status", scope=str, not_covered=list, failed=list)
+    _texts(status["failed"], "status")
+    for row in status["not_covered"]:
+        need(_row(row, "status"), "status", check=str, clause=str)
+
+
+def _row(row: object, what: str) -> Data:
+    if not isinstance(row, dict):
+        raise UserError(f"record: {what} holds {shown(row)} instead of a row")
+    return row
+
+
+def _texts(values: object, what: str) -> None:
+    if not isinstance(values, list) or not all(isinstance(value, str) for value in values):
+        raise UserError(f"record: {what} holds something else than a list of texts")
+
+
+class _Entries:
+    """Checks the entries in order: each may rest only on values that stand before it."""
+
+    def __init__(self, faults: FaultList) -> None:
+        self.faults = faults
+        self.kinds: dict[str, str] = {}
+        self.parts: set[str] = set()
+
+    def check_part(self, part: object) -> None:
+        """Check one part with all its entries."""
+        try:
+            row = _row(part, "parts")
+            need(row, "part", key=str, label=str, title=str, entries=list)
+        except UserError as error:
+            self.faults.take(error)
+            return
+        if row["key"] in self.parts:
+            self.faults.add(f"record: part {row['key'][:40]!r} stands twice")
+        self.parts.add(row["key"])
+        for entry in row["entries"]:
+            try:
+                self._check(_row(entry, f"part {row['key'][:40]!r}"), row["key"])
+            except UserError as error:
+                self.faults.take(error)
+
+    def _check(self, entry: Data, key: str) -> None:
+        need(
+            entry, "entry", id=str, kind=str, symbol=str, label=str, title=str, clause=str,
+            basis=str, digest=str,
+        )  # fmt: skip
+        entry_id, kind, symbol = entry["id"], entry["kind"], entry["symbol"]
+        if kind not in _KINDS or entry_id != f"{key}/{symbol}" or not _is_id(key, symbol):
+            raise UserError(f"record: {entry_id[:80]!r} of kind {kind[:20]!r} is not an entry")
+        if entry_id in self.kinds:
+            raise UserError(f"record: {entry_id} stands twice")
+        self._arguments(entry_id, entry.get("args", {}))
+        self.kinds[entry_id] = kind
+        if kind in VALUES:
+            check_id(symbol)
+            if not is_number(entry.get("value")) or entry.get("unit") not in [*UNITS]:
+                raise UserError(f"record: {entry_id} has no finite value in a known unit")
+        _CHECKS[kind](entry_id, entry)
+        if kind == FOUND:
+            self._arguments(entry_id, entry["closing"]["args"])
+
+    def _arguments(self, entry_id: str, args: object) -> None:
+        if not isinstance(args, dict):
+            raise UserError(f"record: {entry_id}: 'args' is not a dict")
+        for target in args.values():
+            if not isinstance(target, str) or target not in self.kinds:
+                raise UserError(
+                    f"record: {entry_id} rests on {shown(target)}, which does not stand before it"
+                )
+            if self.kinds[target] not in VALUES:
+                raise UserError(f"record: {entry_id} rests on {target}, which is no value")
+
+
+def _is_id(*pieces: str) -> bool:
+    return all(
+        piece.isascii()
+        and piece.replace("-", "").replace("_", "").isalnum()
+        and piece[0].isalnum()
+        and len(piece) <= _LONGEST_ID
+        for piece in pieces
+    )
+
+
+def _given(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, typed=str, source=str, printed=dict)
+    _printed_value(entry_id, entry["printed"], entry["unit"])
+    if "typed" in entry["printed"]:
+        _printed_value(
+            entry_id,
+            {"result": entry["printed"]["typed"], "unit": entry["printed"].get("typed_unit")},
+            entry["unit"],
+        )
+
+
+def _lookup(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, table=str, row=str, source=str, printed=dict)
+    _printed_value(entry_id, entry["printed"], entry["unit"])
+
+
+def _line(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, formula=str, args=dict, numbers=dict, system=str, printed=dict)
+    _, tree = parse_line(entry["formula"])
+    _names(entry_id, entry, names_of(tree))
+    printed = entry["printed"]
+    _printed_value(entry_id, printed, entry["unit"])
+    _printed_args(entry_id, entry)
+    if printed.get("coherent") is not None:
+        need(printed, entry_id, coherent=dict)
+        _printed_value(entry_id, printed["coherent"], entry["unit"])
+    _system(entry_id, entry)
+
+
+def _criterion(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, numbers=dict, system=str, conclusion=str)
+    _system(entry_id, entry)
+    _comparison(entry_id, entry)
+    if entry["kind"] != CHECK:
+        return
+    if entry.get("utilisation") is not None:
+        printed = entry["printed"].get("utilisation")
+        if not is_number(entry["utilisation"]) or not is_number_text(printed):
+            raise UserError(f"record: {entry_id}: the utilisation is not a number")
+    if entry.get("exception") is not None:
+        need(entry, entry_id, exception=dict)
+        need(entry["exception"], entry_id, reason=str, initials=str)
+
+
+def _comparison(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, formula=str, args=dict, holds=bool, unit=str, printed=dict)
+    left, _, right = parse_criterion(entry["formula"])
+    _names(entry_id, entry, (*names_of(left), *names_of(right)))
+    if not (is_number(entry.get("left")) and is_number(entry.get("right"))):
+        raise UserError(f"record: {entry_id} compares something that is no finite number")
+    for side in ("left", "right"):
+        shown_side = {"result": entry["printed"].get(side), "unit": entry["printed"].get("unit")}
+        _printed_value(entry_id, shown_side, entry["unit"])
+    _printed_args(entry_id, entry)
+
+
+def _found(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, procedure=dict, settings=dict, args=dict, closing=dict, printed=dict)
+    need(entry["procedure"], entry_id, name=str, version=int, title=str)
+    if not all(is_number(value) for value in entry["settings"].values()):
+        raise UserError(f"record: {entry_id}: a setting is not a number")
+    _printed_value(entry_id, entry["printed"], entry["unit"])
+    _printed_args(entry_id, entry)
+    _comparison(entry_id, entry["closing"])
+
+
+def _figure(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, figure=dict, alt=str, caption=str)
+
+
+def _note(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, text=str)
+
+
+def _table(entry_id: str, entry: Data) -> None:
+    need(entry, entry_id, columns=list, rows=list)
+    _texts(entry["columns"], entry_id)
+    for row in entry["rows"]:
+        _texts(row, entry_id)
+        if len(row) != len(entry["columns"]):
+            raise UserError(f"record: {entry_id}: a row of the table has too few or many cells")
+
+
+_CHECKS = {
+    GIVEN: _given, LOOKUP: _lookup, LINE: _line, FOUND: _found,
+    DECISION: _criterion, CHECK: _criterion, FIGURE: _figure, NOTE: _note, TABLE: _table,
+}  # fmt: skip
+
+
+def _names(entry_id: str, entry: Data, names: tuple[str, ...]) -> None:
+    missing = set(names) ^ set(entry["args"])
+    if missing:
+        raise UserError(
+            f"record: {entry_id}: {min(missing)[:40]!r} is not both in its formula and its args"
+        )
+
+
+def _printed_args(entry_id: str, entry: Data) -> None:
+    texts = entry["printed"].get("args")
+    if not isinstance(texts, dict) or set(texts) != set(entry["args"]):
+        raise UserError(f"record: {entry_id}: not every argument is printed")
+    if not all(is_number_text(text) for text in texts.values()):
+        raise UserError(f"record: {entry_id}: a printed argument is not a number")
+
+
+def _printed_value(entry_id: str, printed: Data, unit: str) -> None:
+    text, shown_unit = printed.get("result"), printed.get("unit")
+    if not is_number_text(text):
+        raise UserError(f"record: {entry_id}: printed {shown(text)} is not a number")
+    known = isinstance(shown_unit, str) and shown_unit in UNITS and unit in UNITS
+    if not known or UNITS[str(shown_unit)].kind != UNITS[unit].kind:
+        raise UserError(f"record: {entry_id}: {shown(shown_unit)} is not a unit of its kind")
+
+
+def _system(entry_id: str, entry: Data) -> None:
+    texts = all(isinstance(unit, str) for unit in entry["numbers"].values())
+    if entry["system"] not in _SYSTEMS or not texts:
+        raise UserError(f"record: {entry_id}: its system or its constants' units are damaged")

@@ -1,0 +1,267 @@
+from __future__ import annotations
+
+import json
+import os
+import re
+from collections.abc import Callable
+from pathlib import Path
+from typing import Any
+
+import pytest
+
+from lineproof.cli import main
+from lineproof.notebook.execute import execute
+from lineproof.package import records_in_html, records_in_pdf
+from lineproof.record import MIME
+
+Notebook = dict[str, Any]
+NAMES = ["beam.html", "beam.json", "beam.pdf"]
+
+
+def save(notebook: Notebook, path: Path) -> Path:
+    path.write_text(json.dumps(notebook), encoding="utf-8")
+    return path
+
+
+def files_in(folder: Path) -> list[str]:
+    return sorted(str(p.relative_to(folder)) for p in folder.rglob("*") if p.is_file())
+
+
+def test_a_calc_is_issued_into_one_folder_beside_it(
+    beam_file: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    before = beam_file.read_bytes()
+    assert main(["issue", str(beam_file)]) == 0
+    folder = beam_file.parent / "issued"
+    assert files_in(folder) == NAMES
+    record = json.loads((folder / "beam.json").read_text(encoding="utf-8"))
+    assert records_in_pdf((folder / "beam.pdf").read_bytes()) == [record]
+    assert records_in_html((folder / "beam.html").read_text(encoding="utf-8")) == [record]
+    assert beam_file.read_bytes() == before
+    said = capsys.readouterr()
+    assert [line for line in said.out.splitlines() if line.startswith(str(folder))] == [
+        str(folder / f"beam.{kind}") for kind in ("pdf", "html", "json")
+    ]
+    assert said.err.splitlines() == [f"running {beam_file}", f"printing {folder}"]
+
+
+def test_issuing_twice_gives_the_same_bytes(beam_file: Path) -> None:
+    made = []
+    for name in ("first", "second"):
+        folder = beam_file.parent / name
+        assert main(["issue", str(beam_file), "--into", str(folder)]) == 0
+        made.append({p.name: p.read_bytes() for p in folder.iterdir()})
+    assert made[0] == made[1]
+
+
+def test_a_calc_never_run_is_run_and_issued(unrun: Notebook, tmp_path: Path) -> None:
+    path = save(unrun, tmp_path / "beam.ipynb")
+    before = path.read_bytes()
+    assert main(["issue", str(path), "--into", str(tmp_path / "out")]) == 0
+    assert files_in(tmp_path / "out") == NAMES
+    assert path.read_bytes() == before
+
+
+def media_box(pdf: bytes) -> tuple[float, float]:
+    found = re.search(rb"/MediaBox\s*\[\s*0 0 ([\d.]+) ([\d.]+)\s*\]", pdf)
+    assert found is not None
+    return float(found[1]), float(found[2])
+
+
+def test_paper_is_letter_unless_a4_is_asked_for(beam_file: Path) -> None:
+    # 8.5 x 11 in at 72 points per inch; ISO 216: 210 x 297 mm at 72/25.4 points per mm.
+    assert main(["issue", str(beam_file)]) == 0
+    pdf = beam_file.parent / "issued" / "beam.pdf"
+    assert media_box(pdf.read_bytes()) == pytest.approx((612, 792), abs=0.1)
+    assert main(["issue", str(beam_file), "--paper", "a4"]) == 0
+    assert media_box(pdf.read_bytes()) == pytest.approx((595.28, 841.89), abs=0.1)
+
+
+def test_a_check_that_fails_is_issued_and_said(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    # By hand: M_r = 456.1 kN.m for 2500 mm2, less than 500 kN.m.
+    unrun["cells"][2]["source"] = 'M_f = "500 kN.m"\nA_s = "2500 mm2"'
+    path = save(unrun, tmp_path / "beam.ipynb")
+    assert main(["issue", str(path)]) == 1
+    assert files_in(tmp_path / "issued") == NAMES
+    assert "B1: check flexure/moment (Moment resistance) does not hold" in capsys.readouterr().out
+
+
+def test_two_calcs_make_one_package(unrun: Notebook, tmp_path: Path) -> None:
+    first = save(unrun, tmp_path / "one.ipynb")
+    unrun["cells"][3]["source"] = unrun["cells"][3]["source"].replace('"B1"', '"B2"')
+    second = save(unrun, tmp_path / "two.ipynb")
+    assert main(["issue", str(first), str(second), "--into", str(tmp_path / "out")]) == 0
+    assert files_in(tmp_path / "out") == ["one.json", "package.html", "package.pdf", "two.json"]
+    records = records_in_pdf((tmp_path / "out" / "package.pdf").read_bytes())
+    assert [record["calc"]["id"] for record in records] == ["B1", "B2"]
+
+
+def refused(arguments: list[str], capsys: pytest.CaptureFixture[str]) -> str:
+    capsys.readouterr()
+    assert main(arguments) == 2
+    said = capsys.readouterr()
+    assert "Traceback" not in said.err
+    assert said.out == ""
+    return said.err
+
+
+def edited(beam: Notebook, folder: Path) -> Path:
+    """Write a notebook whose input was changed after it was run."""
+    beam["cells"][2]["source"] = 'M_f = "400 kN.m"\nA_s = "2500 mm2"'
+    return save(beam, folder / "beam.ipynb")
+
+
+def test_stored_values_that_disagree_are_listed_and_refused(
+    beam: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    path = edited(beam, tmp_path)
+    before = path.read_bytes()
+    said = refused(["issue", str(path)], capsys)
+    assert 'cell 3 (M_f = "400 kN.m") was changed after it was run' in said
+    assert "2 lines differ from a re-run" in said
+    assert "  data/M_f: value stored 385 kN.m, made again 400 kN.m" in said
+    assert "  flexure/moment: left side stored 385 kN.m, made again 400 kN.m" in said
+    assert "nothing has been issued" in said
+    assert files_in(tmp_path) == ["beam.ipynb"]
+    assert path.read_bytes() == before
+
+
+def test_a_tampered_value_is_found(
+    beam: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    record = beam["cells"][-1]["outputs"][0]["data"][MIME]
+    record["parts"][1]["entries"][1]["value"] = 556.1
+    said = refused(["issue", str(save(beam, tmp_path / "beam.ipynb"))], capsys)
+    assert "1 line differs from a re-run" in said
+    assert "  flexure/M_r: value stored 556.1 kN.m, made again 456.1023" in said
+
+
+def test_update_stores_the_new_values_and_issues(beam: Notebook, tmp_path: Path) -> None:
+    path = edited(beam, tmp_path)
+    assert main(["issue", str(path), "--update"]) == 0
+    stored = path.read_text(encoding="utf-8")
+    assert stored == execute(json.loads(stored), "beam.ipynb", tmp_path)
+    record = json.loads((tmp_path / "issued" / "beam.json").read_text(encoding="utf-8"))
+    assert record["parts"][0]["entries"][7]["printed"]["result"] == "400"
+    assert main(["recheck", str(path)]) == 0
+
+
+def test_update_takes_over_a_calc_whose_last_run_failed(beam: Notebook, tmp_path: Path) -> None:
+    beam["cells"][5]["outputs"] = [
+        {"output_type": "error", "ename": "UserError", "evalue": "wrong", "traceback": []}
+    ]
+    beam["cells"][6]["outputs"] = []
+    path = save(beam, tmp_path / "beam.ipynb")
+    assert main(["issue", str(path)]) == 2
+    assert main(["issue", str(path), "--update"]) == 0
+
+
+def without_parameters(notebook: Notebook) -> None:
+    notebook["cells"][2]["metadata"] = {}
+
+
+def with_hostile_formula(notebook: Notebook) -> None:
+    record = notebook["cells"][-1]["outputs"][0]["data"][MIME]
+    record["parts"][1]["entries"][0]["formula"] = "a = __import__('os').system('true')"
+
+
+def with_wrong_input(notebook: Notebook) -> None:
+    notebook["cells"][2]["source"] = 'M_f = "385 kn.m"\nA_s = "-2500"'
+
+
+def with_raw_html(notebook: Notebook) -> None:
+    notebook["cells"][0]["source"] = "<b>bold</b>"
+
+
+def with_unknown_value(notebook: Notebook) -> None:
+    notebook["cells"][4]["source"] = "It is {{ V_r }}."
+
+
+@pytest.mark.parametrize(
+    ("damage", "said"),
+    [
+        (without_parameters, "no cell with the inputs"),
+        (with_hostile_formula, "__import__"),
+        (with_wrong_input, "kn.m"),
+        (with_raw_html, "raw HTML"),
+        (with_unknown_value, "V_r"),
+    ],
+)
+def test_bad_notebooks_are_refused_and_nothing_is_written(
+    beam: Notebook,
+    tmp_path: Path,
+    capsys: pytest.CaptureFixture[str],
+    damage: Callable[[Notebook], None],
+    said: str,
+) -> None:
+    damage(beam)
+    path = save(beam, tmp_path / "beam.ipynb")
+    assert said in refused(["issue", str(path)], capsys)
+    assert files_in(tmp_path) == ["beam.ipynb"]
+
+
+def test_faults_of_all_files_are_named_at_once(
+    tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    (tmp_path / "text.ipynb").write_text("no notebook")
+    said = refused(["issue", *[str(tmp_path / f"{n}.ipynb") for n in ("absent", "text")]], capsys)
+    assert "absent.ipynb: cannot be read (No such file or directory)" in said
+    assert "text.ipynb: not a notebook" in said
+
+
+def test_a_file_in_place_of_the_folder(beam_file: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    place = beam_file.parent / "taken"
+    place.write_text("mine")
+    for into in (place, place / "below"):
+        said = refused(["issue", str(beam_file), "--into", str(into)], capsys)
+        assert "taken" in said
+    assert place.read_text() == "mine"
+    assert files_in(beam_file.parent) == ["beam.ipynb", "taken"]
+
+
+def test_a_folder_that_cannot_be_written(
+    beam_file: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    said = refused(["issue", str(beam_file), "--into", "/proc/lineproof"], capsys)
+    assert "/proc/lineproof: cannot be written" in said
+    assert "choose another folder with --into" in said
+
+
+def test_an_issue_is_replaced_whole_or_not_at_all(
+    beam_file: Path, capsys: pytest.CaptureFixture[str], monkeypatch: pytest.MonkeyPatch
+) -> None:
+    folder = beam_file.parent / "issued"
+    folder.mkdir()
+    for name in NAMES:
+        (folder / name).write_text(f"old {name}")
+    replace = Path.replace
+
+    def fails_at_the_last(self: Path, target: str | os.PathLike[str]) -> Path:
+        if Path(target).name == "beam.json" and "old" not in self.name:
+            raise OSError(28, "No space left on device", str(target))
+        return replace(self, target)
+
+    monkeypatch.setattr(Path, "replace", fails_at_the_last)
+    said = refused(["issue", str(beam_file)], capsys)
+    assert "beam.json: cannot be written (No space left on device)" in said
+    assert files_in(folder) == NAMES
+    assert [(folder / name).read_text() for name in NAMES] == [f"old {name}" for name in NAMES]
+
+
+def test_two_notebooks_of_one_name(
+    beam_file: Path, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    other = tmp_path / "other" / "beam.ipynb"
+    other.parent.mkdir()
+    other.write_bytes(beam_file.read_bytes())
+    said = refused(["issue", str(beam_file), str(other)], capsys)
+    assert "two notebooks are called 'beam'" in said
+
+
+def test_two_calcs_of_one_id(beam_file: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    other = beam_file.with_name("copy.ipynb")
+    other.write_bytes(beam_file.read_bytes())
+    said = refused(["issue", str(beam_file), str(other)], capsys)
+    assert "its calc id 'B1' is that of" in said

@@ -1,0 +1,102 @@
+from __future__ import annotations
+
+import json
+import os
+import sys
+from pathlib import Path
+from typing import Any
+
+import pytest
+
+from lineproof.errors import UserError
+from lineproof.notebook.execute import execute
+
+Notebook = dict[str, Any]
+
+
+def run(notebook: Notebook, folder: Path) -> Notebook:
+    made: Notebook = json.loads(execute(notebook, "beam.ipynb", folder))
+    return made
+
+
+def faults_of(notebook: Notebook, folder: Path) -> tuple[str, ...]:
+    with pytest.raises(UserError) as caught:
+        execute(notebook, "beam.ipynb", folder)
+    return caught.value.faults
+
+
+def with_code(notebook: Notebook, source: str) -> Notebook:
+    """Replace the last cell by other code."""
+    notebook["cells"][-1]["source"] = source
+    return notebook
+
+
+def test_a_run_stores_the_same_text_each_time(
+    beam: Notebook, beam_text: str, tmp_path: Path
+) -> None:
+    assert execute(beam, "beam.ipynb", tmp_path) == beam_text
+
+
+def test_counts_are_whole_numbers_and_no_time_is_stored(beam: Notebook, beam_text: str) -> None:
+    counts = [c["execution_count"] for c in beam["cells"] if c["cell_type"] == "code"]
+    assert counts == [1, 2, 3, 4, 5]
+    assert "iopub" not in beam_text
+    assert "execution" not in beam["cells"][1]["metadata"]
+    assert beam["metadata"]["language_info"] == {
+        "file_extension": ".py", "mimetype": "text/x-python", "name": "python",
+    }  # fmt: skip
+
+
+def test_old_timings_go_and_cells_get_ids(unrun: Notebook, tmp_path: Path) -> None:
+    del unrun["cells"][1]["id"]
+    unrun["cells"][1]["metadata"] = {"execution": {"iopub.execute_input": "2026"}, "editable": True}
+    unrun["nbformat_minor"] = 4
+    cell = run(unrun, tmp_path)["cells"][1]
+    assert cell["id"] == "cell-2"
+    assert cell["metadata"] == {"editable": True}
+
+
+def test_it_runs_this_python_in_the_given_folder(unrun: Notebook, tmp_path: Path) -> None:
+    notebook = with_code(unrun, "import os, sys; print(sys.executable); print(os.getcwd())")
+    (output,) = run(notebook, tmp_path)["cells"][-1]["outputs"]
+    assert "".join(output["text"]).split("\n")[:2] == [sys.executable, os.path.realpath(tmp_path)]
+
+
+def test_start_up_files_of_the_user_are_not_run(
+    unrun: Notebook, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    startup = tmp_path / "ipython" / "profile_default" / "startup"
+    startup.mkdir(parents=True)
+    (startup / "00-changed.py").write_text("M_f = '1 kN.m'; changed = True")
+    monkeypatch.setenv("IPYTHONDIR", str(tmp_path / "ipython"))
+    notebook = with_code(unrun, "print('changed' in globals())")
+    assert run(notebook, tmp_path)["cells"][-1]["outputs"][0]["text"] == ["False\n"]
+
+
+def test_progress_is_told_cell_by_cell(unrun: Notebook, tmp_path: Path) -> None:
+    told: list[tuple[int, int]] = []
+    execute(unrun, "beam.ipynb", tmp_path, lambda done, total: told.append((done, total)))
+    assert told == [(1, 5), (2, 5), (3, 5), (4, 5), (5, 5)]
+
+
+def test_faults_of_the_inputs_are_named_with_their_cell(unrun: Notebook, tmp_path: Path) -> None:
+    unrun["cells"][2]["source"] = 'M_f = "385 kn.m"\nA_s = "2500 mm2"'
+    (fault,) = faults_of(unrun, tmp_path)
+    assert fault.startswith('beam.ipynb: cell 4 (sheet = Sheet("B1", "Test beam B1")): M_f: ')
+    assert "kn.m" in fault
+
+
+def test_several_faults_stay_apart(unrun: Notebook, tmp_path: Path) -> None:
+    code = "from lineproof.errors import UserError\nraise UserError(['h: wrong', 'b: wrong'])"
+    faults = faults_of(with_code(unrun, code), tmp_path)
+    assert [fault[-8:] for fault in faults] == ["h: wrong", "b: wrong"]
+
+
+def test_another_exception_is_named_in_one_line(unrun: Notebook, tmp_path: Path) -> None:
+    (fault,) = faults_of(with_code(unrun, "1/0"), tmp_path)
+    assert fault == "beam.ipynb: cell 7 (1/0): ZeroDivisionError: division by zero"
+
+
+def test_a_python_that_dies_is_named(unrun: Notebook, tmp_path: Path) -> None:
+    (fault,) = faults_of(with_code(unrun, "import os; os._exit(3)"), tmp_path)
+    assert fault.startswith("beam.ipynb: Python stopped while running it (")

@@ -1,0 +1,143 @@
+"""Reading typed quantities: values, and errors word by word."""
+
+from __future__ import annotations
+
+import math
+import time
+from decimal import Decimal
+from fractions import Fraction
+from typing import Any
+
+import pint
+import pytest
+from hypothesis import given
+from hypothesis import strategies as st
+
+from lineproof.errors import UserError
+from lineproof.quantity import UNITS, echo, factor, read_quantity, registry
+
+
+@pytest.mark.parametrize(
+    ("typed", "unit", "value", "number"),
+    [
+        ("7.6 m", "mm", 7600.0, "7.6"),
+        ("7.6m", "mm", 7600.0, "7.6"),
+        ("24 in", "mm", 609.6, "24"),  # 24 x 25.4
+        ("5000 psi", "MPa", 34.47378646584181, "5000"),  # 5000 x 4.4482216152605/645.16
+        ("0.30 m", "mm", 300.0, "0.30"),  # zeros typed are kept
+        ("+4.8 kPa", "MPa", 0.0048, "4.8"),
+        ("-.5 kN", "N", -500.0, "-0.5"),
+        ("5. mm", "mm", 5.0, "5"),
+        ("2E+05 MPa", "MPa", 200000.0, "2e5"),
+        ("1e-3 m", "mm", 1.0, "1e-3"),
+        ("007 mm", "mm", 7.0, "7"),
+        ("-0.0 mm", "mm", 0.0, "0.0"),
+        ("0.65", "", 0.65, "0.65"),
+        (0.65, "", 0.65, "0.65"),
+        (0.1 + 0.2, "", 0.1 + 0.2, "0.30000000000000004"),
+        (3, "", 3.0, "3"),
+        (Decimal("1.50"), "", 1.5, "1.50"),
+        ("45°", "deg", 45.0, "45"),
+        ("7.6\u00a0 m", "mm", 7600.0, "7.6"),
+    ],
+)
+def test_typed_values(typed: Any, unit: str, value: float, number: str) -> None:
+    read = read_quantity("x", typed, unit)
+    assert read.value == pytest.approx(value, rel=1e-15, abs=1e-300)
+    assert read.number == number
+
+
+@pytest.mark.parametrize(
+    ("typed", "unit", "sentence"),
+    [
+        ("32", "MPa", "f_c: '32' has no unit; write '32 MPa'"),
+        (32, "MPa", "f_c: '32' has no unit; write '32 MPa'"),
+        (32.5, "MPa", "f_c: '32.5' has no unit; write '32.5 MPa'"),
+        ("32 mm", "MPa", "f_c: '32 mm' is a length, but a stress or pressure is needed; "
+         "write it in MPa, Pa, kPa, GPa, psi, ksi"),
+        ("32 Mpa", "MPa", "f_c: '32 Mpa': 'Mpa' is not a unit of the list; write 'MPa'"),
+        ("0,65", "", "f_c: '0,65' is not a number with a unit; write a decimal point: '0.65'"),
+        ("7,6 m", "mm", "f_c: '7,6 m' is not a number with a unit; write a decimal point: '7.6 m'"),
+        ("abc", "MPa", "f_c: 'abc' is not a number with a unit; write for example '25 MPa'"),
+        ("", "MPa", "f_c: '' is not a number with a unit; write for example '25 MPa'"),
+        ("0.65 mm", "", "f_c: '0.65 mm' has a unit; write the bare number '0.65'"),
+        (None, "MPa", "f_c: 'None' is not a quantity; write '25 MPa'"),
+        (True, "", "f_c: 'True' is not a quantity; write '25'"),
+        ([32], "MPa", "f_c: '[32]' is not a quantity; write '25 MPa'"),
+        (math.nan, "MPa", "f_c: nan".replace("nan", "'nan'")
+         + " is not a number with a unit; write for example '25 MPa'"),
+    ],
+)  # fmt: skip
+def test_error_sentences(typed: Any, unit: str, sentence: str) -> None:
+    with pytest.raises(UserError) as caught:
+        read_quantity("f_c", typed, unit)
+    assert str(caught.value) == sentence
+    assert caught.value.exit_code == 2
+
+
+HOSTILE: list[Any] = [
+    "nan MPa", "inf MPa", "-inf", "NaN", "Infinity MPa", math.inf, -math.inf, Decimal("NaN"),
+    Decimal("sNaN"), Decimal("Infinity"), 10**5000, -(10**5000), 10**400, "1e999 MPa", "1e400",
+    "9" * 10_000 + " MPa", "1" + "0" * 100 + " MPa", "1.2.3 MPa", "1 2 MPa", "1_000 MPa",
+    "0x20 MPa", "٣٢ MPa", "３２ MPa", "−32 MPa", "32 MPa MPa", "32 9**9**9", "32 m**9**9**9",
+    "32 __import__('os')", "9**9**9", "32 MPa; 5", "32 MPa\x00", "32" + " " * 100_000,
+    "3" * 100_000, "(" * 10_000, "1e5e5 MPa", "--5 MPa", "5e MPa", ".", "+", "e5 MPa", b"32 MPa",
+    {"a": 1}, object(), 3 + 4j, "\ud800 MPa", "32\nMPa\n" * 2000, {1, 2}, range(3),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize("typed", HOSTILE, ids=range(len(HOSTILE)))
+def test_hostile_input_is_refused_quickly(typed: Any) -> None:
+    start = time.perf_counter()
+    with pytest.raises(UserError) as caught:
+        read_quantity("f_c", typed, "MPa")
+    assert time.perf_counter() - start < 0.25
+    assert str(caught.value).startswith("f_c: ")
+    assert len(str(caught.value)) < 300
+
+
+def test_a_pint_quantity_of_any_registry_is_taken() -> None:
+    theirs: Any = pint.UnitRegistry()
+    assert read_quantity("h", theirs.Quantity(2, "foot"), "mm").value == pytest.approx(609.6)
+    assert read_quantity("q", theirs.Quantity(100, "psi"), "kPa").text == "689.475729317 kPa"
+    assert read_quantity("t", theirs.Quantity(90, "minute"), "h").value == pytest.approx(1.5)
+    for unit in UNITS.values():  # and our own, for every unit of the list
+        ours = registry().Quantity(2.0, unit.expression)
+        again = read_quantity("x", ours, unit.spelling)
+        assert again.value == pytest.approx(float(2 * factor(unit.spelling, unit.internal)))
+
+
+def test_a_pint_quantity_of_another_kind_is_refused() -> None:
+    theirs: Any = pint.UnitRegistry()
+    for wrong in (theirs.Quantity(2, "second"), theirs.Quantity(math.nan, "mm")):
+        with pytest.raises(UserError, match=r"^h: .*write"):
+            read_quantity("h", wrong, "mm")
+    with pytest.raises(UserError, match="is not a length; write it in mm"):
+        read_quantity("h", theirs.Quantity([1, 2], "kN"), "mm")
+
+
+@given(
+    st.decimals(min_value=-(10**9), max_value=10**9, places=4),
+    st.sampled_from(sorted(u for u in UNITS if u)),
+)
+def test_reading_is_exact_decimal_arithmetic(number: Decimal, unit: str) -> None:
+    read = read_quantity("x", f"{number} {unit}", unit)
+    # Independent: rational arithmetic on the typed text, rounded to a float once.
+    expected = Fraction(str(number)) * Fraction(factor(unit, UNITS[unit].internal))
+    assert read.value == pytest.approx(float(expected), rel=1e-15)
+    assert Decimal(read.number) == number
+
+
+@given(st.floats(allow_nan=False, allow_infinity=False, min_value=-1e80, max_value=1e80))
+def test_every_ordinary_float_can_be_given_as_a_number(value: float) -> None:
+    try:
+        read = read_quantity("x", value, "")
+    except UserError as error:  # more than 99 or less than -99 as power of ten
+        assert abs(value) < 1e-80 or len(repr(value)) > 20, error  # noqa: PT017
+    else:
+        assert read.value == value
+
+
+def test_echo_is_short() -> None:
+    assert len(echo("x" * 10_000)) == 62
+    assert echo(10**5000) == "a number of more than 60 digits"

@@ -1,0 +1,197 @@
+"""Rows: one wording of an entry for HTML, PDF and notebook."""
+
+from __future__ import annotations
+
+from typing import Any
+
+import pytest
+
+from lineproof.formula import Notation, Symbol
+from lineproof.formula.grammar import parse_expression
+from lineproof.typeset.measure import broken, shrink, width
+from lineproof.typeset.plain import plain
+from lineproof.typeset.rows import PrintedRow, printed_row
+from lineproof.typeset.values import symbol_math, value_math
+from lineproof.typeset.visitor import formula_math
+
+NOTATION = Notation(
+    [
+        Symbol("a", "a", "", "", "depth of the stress block", "mm"),
+        Symbol("h_f", "h", "f", "", "thickness of flange", "mm"),
+        Symbol("M_r", "M", "r", "", "moment resistance", "kN.m"),
+        Symbol("f_c", "f", "c", "′", "strength of concrete", "MPa"),
+        Symbol("E_c", "E", "c", "", "modulus of elasticity", "MPa"),
+    ]
+)
+
+
+def entry(kind: str, **more: Any) -> dict[str, Any]:
+    """Return an entry with what all kinds have in common."""
+    common = {"id": "p/x", "kind": kind, "symbol": "x", "label": "1.1", "title": "", "clause": "",
+              "basis": "", "digest": "0"}  # fmt: skip
+    return common | more
+
+
+def texts(row: PrintedRow) -> list[str]:
+    """Return the row's chains in plain text."""
+    return [chain.plain for chain in row.chains]
+
+
+def test_a_line_prints_formula_substitution_and_coherent_result() -> None:
+    """The result stands apart, the working before it is recomputable."""
+    row = printed_row(
+        entry(
+            "line", symbol="M_r", formula="M_r = phi_s*A_s*f_y*(d - a/2)",
+            args={"phi_s": "m/phi_s", "a": "p/a"},
+            printed={
+                "args": {"phi_s": "0.85", "A_s": "3000", "f_y": "400", "d": "556", "a": "19.7"},
+                "result": "557", "unit": "kN.m", "coherent": {"result": "557e6", "unit": "N.mm"},
+            },
+        ),
+        NOTATION, {"m/phi_s": "2.4", "p/a": "5.1"},
+    )  # fmt: skip
+
+    assert texts(row) == [
+        "M_r = phi_s A_s f_y (d - a / 2) = 0.85 x 3000 x 400 x (556 - 19.7 / 2) = 557 x 10^6 N.mm"
+    ]
+    assert row.result is not None
+    assert plain(row.result) == "M_r = 557 kN.m"
+    assert [(o.id, o.label) for o in row.origins] == [("m/phi_s", "2.4"), ("p/a", "5.1")]
+    assert row.title == "Moment resistance"
+
+
+def test_a_line_that_only_names_a_value_is_not_printed_twice() -> None:
+    """A line "M = M_f" has no substitution apart from its result."""
+    row = printed_row(
+        entry("line", symbol="a", formula="a = h_f", args={},
+              printed={"args": {"h_f": "140"}, "result": "140", "unit": "mm", "coherent": None}),
+        NOTATION,
+    )  # fmt: skip
+
+    assert texts(row) == ["a = h_f"]
+
+
+def test_empirical_numbers_are_named_with_their_units() -> None:
+    """4500 in the root of MPa."""
+    row = printed_row(
+        entry("line", symbol="E_c", formula="E_c = 4500*sqrt(f_c)", args={}, basis="from memory",
+              numbers={"4500": "MPa^0.5"},
+              printed={"args": {"f_c": "32"}, "result": "25500", "unit": "MPa", "coherent": None}),
+        NOTATION,
+    )  # fmt: skip
+
+    assert row.remarks == ("Numbers of the formula: 4500 in √MPa.", "Basis: from memory.")
+
+
+def criterion(formula: str, left: str, right: str, *, holds: bool, **args: str) -> dict[str, Any]:
+    """Return the part of an entry that a criterion fills."""
+    return {
+        "formula": formula, "args": {}, "holds": holds, "unit": "mm", "conclusion": "So it is.",
+        "printed": {"args": args, "left": left, "right": right, "unit": "mm"},
+    }  # fmt: skip
+
+
+def test_two_plain_names_print_as_one_comparison() -> None:
+    """Both symbols stand with their values."""
+    made = criterion("a <= h_f", "26.1", "140", holds=True, a="26.1", h_f="140")
+    row = printed_row(entry("decision", **made), NOTATION)
+
+    assert texts(row) == ["a = 26.1 mm <= h_f = 140 mm"]
+    assert row.verdict == "yes"
+    assert row.conclusion == "So it is."
+
+
+def test_a_failed_comparison_is_true_as_printed() -> None:
+    """What was asked stands first; the values stand with the sign that holds."""
+    made = criterion("a <= h_f", "150", "140", holds=False, a="150", h_f="140")
+    row = printed_row(entry("check", **made), NOTATION)
+
+    assert texts(row) == ["asked: a <= h_f", "a = 150 mm > h_f = 140 mm"]
+    assert row.verdict == "does not hold"
+    assert not row.holds
+
+
+def test_an_expression_prints_in_three_lines() -> None:
+    """Criterion, substitution, both values."""
+    made = criterion("2*a <= h_f", "52.2", "140", holds=True, a="26.1", h_f="140")
+    row = printed_row(entry("check", **made), NOTATION)
+
+    assert texts(row) == ["2 a <= h_f", "2 x 26.1 <= 140", "52.2 mm <= 140 mm"]
+
+
+def test_an_accepted_exception_still_does_not_hold() -> None:
+    """Reason and initials are printed."""
+    made = criterion("a <= h_f", "150", "140", holds=False, a="150", h_f="140")
+    exception = {"reason": "shored until cured.", "initials": "A.V."}
+    row = printed_row(entry("check", **made, exception=exception), NOTATION)
+
+    assert row.verdict == "accepted, does not hold"
+    assert row.remarks == ("Exception accepted by A.V.: shored until cured.",)
+
+
+def test_givens_and_lookups_name_their_source() -> None:
+    """A US unit shows what was typed; a table its row."""
+    given = printed_row(
+        entry("given", symbol="h_f", source="drawing A-210", printed={
+            "typed": "5.5", "typed_unit": "in", "result": "139.7", "unit": "mm"}),
+        NOTATION,
+    )  # fmt: skip
+    lookup = printed_row(
+        entry("lookup", symbol="h_f", table="slabs", row="S1", source="schedule",
+              printed={"result": "140", "unit": "mm"}),
+        NOTATION,
+    )  # fmt: skip
+
+    assert given.remarks == ("Typed as 5.5\u202fin.", "Source: drawing A-210.")
+    assert lookup.remarks == ("From slabs, row S1.", "Source: schedule.")
+
+
+def test_a_found_value_names_procedure_arguments_and_closing_criterion() -> None:
+    """The reader can confirm the value without the procedure."""
+    row = printed_row(
+        entry("found", symbol="a", args={}, unit="mm",
+              procedure={"name": "root", "version": 2, "title": "bisection"},
+              printed={"args": {"f_c": "32", "M_r": "557e6"}, "result": "26.10", "unit": "mm"},
+              closing=criterion("a <= h_f", "26.10", "140", holds=True, a="26.10", h_f="140")),
+        NOTATION,
+    )  # fmt: skip
+
+    assert row.text == "Found by bisection (root, version 2), with"
+    assert [plain(m) for m in row.inputs] == ["f'c = 32 MPa", "M_r = 557 x 10^6 N.mm"]
+    assert texts(row) == ["a = 26.10 mm <= h_f = 140 mm"]
+
+
+def test_table_headings_name_symbol_and_unit() -> None:
+    """A heading "M_r, kN.m" is typeset; other headings stay text; columns of numbers are known."""
+    row = printed_row(
+        entry("table", columns=["Bars", "M_r, kN.m", "Depth, of a pit"],
+              rows=[["4-25M", "557", "1"], ["2-25M", "5.00e9", ""]]),
+        NOTATION,
+    )  # fmt: skip
+
+    assert row.table is not None
+    assert [plain(c) for c in row.table.columns] == ["Bars", "M_r, kN·m", "Depth, of a pit"]
+    assert row.table.rows[1] == ("2-25M", "5.00 × 10⁹", "")
+    assert row.table.numeric == (False, True, True)
+
+
+@pytest.mark.parametrize("limit", [8.0, 14.0, 30.0])
+def test_long_rows_break_before_signs_and_lose_nothing(limit: float) -> None:
+    """Pieces joined again give the same text; each begins with a sign."""
+    math = formula_math(parse_expression("a*b + c*d - a*b*c + (a + b)*c - d*d + a*a"), NOTATION)
+    pieces = broken(math, limit)
+
+    assert "".join(map(plain, pieces)) == plain(math)
+    assert all(width(piece) <= limit for piece in pieces)
+    assert all(plain(piece).startswith((" + ", " - ")) for piece in pieces[1:])
+    assert len(pieces) > 1 or limit == 30.0
+
+
+def test_a_mark_that_cannot_break_is_made_smaller() -> None:
+    """Half size is the limit."""
+    math = formula_math(parse_expression("(" + " + ".join(["a_bcdef"] * 30) + ")/2"), NOTATION)
+
+    assert broken(math, 30.0) == (math,)
+    assert shrink(math, 30.0) == 0.5
+    assert shrink(symbol_math(NOTATION["a"]), 30.0) == 1.0
+    assert width(value_math("551", "kN.m")) == pytest.approx(1.5 + 0.17 + 4 * 0.52)
