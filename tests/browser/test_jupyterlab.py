@@ -9,11 +9,9 @@ import socket
 import subprocess
 import sys
 import time
-import urllib.error
-import urllib.request
 from collections.abc import Iterator
 from dataclasses import dataclass
-from http.client import HTTPResponse
+from http.client import HTTPConnection
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -33,22 +31,23 @@ PAGE_MILLISECONDS = 60_000
 class Lab:
     """A running server that serves one folder with the beam's notebook."""
 
-    address: str
+    port: int
     folder: Path
 
-    def get(self, path: str) -> tuple[bytes, str]:
-        """Return body and content type."""
-        request = urllib.request.Request(
-            f"{self.address}/{path}", headers={"Authorization": f"token {TOKEN}"}
-        )
-        with urllib.request.urlopen(request, timeout=60) as response:
-            assert isinstance(response, HTTPResponse)
-            return response.read(), response.headers["Content-Type"]
+    def get(self, path: str) -> tuple[int, str, bytes]:
+        """Return status, content type and body."""
+        connection = HTTPConnection("127.0.0.1", self.port, timeout=60)
+        try:
+            connection.request("GET", f"/{path}", headers={"Authorization": f"token {TOKEN}"})
+            answer = connection.getresponse()
+            return answer.status, answer.headers["Content-Type"], answer.read()
+        finally:
+            connection.close()
 
 
 @pytest.fixture(scope="module")
 def lab(beam_text: str, tmp_path_factory: pytest.TempPathFactory) -> Iterator[Lab]:
-    """A JupyterLab of this environment with fresh settings, so that nothing is trusted."""
+    """Start a JupyterLab of this environment with fresh settings, so that nothing is trusted."""
     home = tmp_path_factory.mktemp("lab")
     folder = home / "calcs"
     folder.mkdir()
@@ -57,10 +56,10 @@ def lab(beam_text: str, tmp_path_factory: pytest.TempPathFactory) -> Iterator[La
         name: str(home / name.lower())
         for name in ("JUPYTER_CONFIG_DIR", "JUPYTER_DATA_DIR", "JUPYTER_RUNTIME_DIR", "IPYTHONDIR")
     }
-    address = f"http://127.0.0.1:{_free_port()}"
+    port = _free_port()
     command = [
         sys.executable, "-m", "jupyterlab", "--no-browser", "--allow-root",
-        f"--ServerApp.port={address.rpartition(':')[2]}", "--ServerApp.port_retries=0",
+        f"--ServerApp.port={port}", "--ServerApp.port_retries=0",
         f"--IdentityProvider.token={TOKEN}", f"--ServerApp.root_dir={folder}",
     ]  # fmt: skip
     log = home / "server.log"
@@ -69,7 +68,7 @@ def lab(beam_text: str, tmp_path_factory: pytest.TempPathFactory) -> Iterator[La
             command, env=os.environ | settings, stdout=output, stderr=subprocess.STDOUT
         )
     try:
-        made = Lab(address, folder)
+        made = Lab(port, folder)
         _wait(made, server, log)
         yield made
     finally:
@@ -98,20 +97,22 @@ def _wait(lab: Lab, server: subprocess.Popen[bytes], log: Path) -> None:
 
 def test_the_server_lists_both_exporters(lab: Lab) -> None:
     # JupyterLab's "Save and Export Notebook As" menu is filled from this list.
-    listed = json.loads(lab.get("api/nbconvert")[0])
+    listed = json.loads(lab.get("api/nbconvert")[2])
     assert listed["calc_package_pdf"] == {"output_mimetype": "application/pdf"}
     assert listed["calc_package_html"] == {"output_mimetype": "text/html"}
 
 
 def test_the_menu_route_downloads_the_pdf(lab: Lab) -> None:
-    body, kind = lab.get("nbconvert/calc_package_pdf/beam.ipynb?download=true")
+    status, kind, body = lab.get("nbconvert/calc_package_pdf/beam.ipynb?download=true")
+    assert status == 200
     assert kind.startswith("application/pdf")
     assert body.startswith(b"%PDF-")
     assert records_in_pdf(body)[0]["calc"]["id"] == "B1"
 
 
 def test_the_menu_route_downloads_the_page(lab: Lab) -> None:
-    body, kind = lab.get("nbconvert/calc_package_html/beam.ipynb?download=true")
+    status, kind, body = lab.get("nbconvert/calc_package_html/beam.ipynb?download=true")
+    assert status == 200
     assert kind.startswith("text/html")
     assert records_in_html(body.decode())[0]["calc"]["id"] == "B1"
 
@@ -120,19 +121,18 @@ def test_a_calc_that_was_not_run_is_refused_with_what_to_do(
     lab: Lab, unrun: dict[str, object]
 ) -> None:
     (lab.folder / "unrun.ipynb").write_text(json.dumps(unrun), encoding="utf-8")
-    with pytest.raises(urllib.error.HTTPError) as caught:
-        lab.get("nbconvert/calc_package_pdf/unrun.ipynb?download=true")
-    with caught.value as answer:
-        page = answer.read().decode()
-        assert answer.code == 500
-    assert "unrun: has not been run; run all cells, then save" in page
+    status, _, body = lab.get("nbconvert/calc_package_pdf/unrun.ipynb?download=true")
+    assert status == 500
+    assert "unrun: has not been run; run all cells, then save" in body.decode()
 
 
 @pytest.fixture(scope="module")
 def page(lab: Lab, browser: Browser) -> Iterator[Page]:
-    """The beam's notebook, opened untrusted and typeset."""
+    """Open the beam's notebook untrusted and wait until it is typeset."""
     made = browser.new_page(viewport={"width": 1400, "height": 2200})
-    made.goto(f"{lab.address}/lab/tree/beam.ipynb?token={TOKEN}", timeout=PAGE_MILLISECONDS)
+    made.goto(
+        f"http://127.0.0.1:{lab.port}/lab/tree/beam.ipynb?token={TOKEN}", timeout=PAGE_MILLISECONDS
+    )
     made.wait_for_function(
         "document.querySelectorAll('.jp-OutputArea mjx-container').length >= 14",
         timeout=PAGE_MILLISECONDS,

@@ -1,20 +1,27 @@
 from __future__ import annotations
 
+import json
 import subprocess
 import sys
 from importlib.metadata import entry_points
 from pathlib import Path
 from typing import Any
 
+import nbconvert.exporters
 import nbformat
 import pytest
-from nbconvert.exporters import get_exporter
 
 from lineproof.errors import UserError
-from lineproof.notebook.exporters import CalcPackageHtml, CalcPackagePdf
+from lineproof.notebook import exporters
 from lineproof.package import records_in_html, records_in_pdf
 
 Notebook = dict[str, Any]
+
+# These functions of Jupyter carry no types.
+node: Any = nbformat.from_dict
+get_exporter: Any = nbconvert.exporters.get_exporter
+CalcPackagePdf: Any = exporters.CalcPackagePdf
+CalcPackageHtml: Any = exporters.CalcPackageHtml
 
 
 def record_of(notebook: Notebook) -> Any:
@@ -34,7 +41,7 @@ def test_the_names_are_what_a_server_can_route() -> None:
 
 
 def test_a_notebook_becomes_a_pdf_with_its_record(beam: Notebook) -> None:
-    printed, resources = CalcPackagePdf().from_notebook_node(nbformat.from_dict(beam))
+    printed, resources = CalcPackagePdf().from_notebook_node(node(beam))
     assert printed.startswith(b"%PDF-")
     assert records_in_pdf(printed) == [record_of(beam)]
     assert resources["output_extension"] == ".pdf"
@@ -42,7 +49,7 @@ def test_a_notebook_becomes_a_pdf_with_its_record(beam: Notebook) -> None:
 
 
 def test_a_notebook_becomes_a_page_with_its_record(beam: Notebook) -> None:
-    printed, resources = CalcPackageHtml().from_notebook_node(nbformat.from_dict(beam))
+    printed, resources = CalcPackageHtml().from_notebook_node(node(beam))
     assert printed.startswith("<!DOCTYPE html>")
     assert records_in_html(printed) == [record_of(beam)]
     assert "A beam for tests." in printed
@@ -51,27 +58,26 @@ def test_a_notebook_becomes_a_page_with_its_record(beam: Notebook) -> None:
 
 def test_nothing_is_left_that_makes_the_server_send_an_archive(beam: Notebook) -> None:
     given = {"metadata": {"name": "beam"}, "outputs": {"a.png": b""}, "attachments": {"b": b""}}
-    _, resources = CalcPackageHtml().from_notebook_node(nbformat.from_dict(beam), given)
+    _, resources = CalcPackageHtml().from_notebook_node(node(beam), given)
     assert not {"outputs", "attachments"} & set(resources)
 
 
 def test_the_same_notebook_gives_the_same_bytes(beam: Notebook) -> None:
-    node = nbformat.from_dict(beam)
-    first, second = (CalcPackagePdf().from_notebook_node(node)[0] for _ in range(2))
+    first, second = (CalcPackagePdf().from_notebook_node(node(beam))[0] for _ in range(2))
     assert first == second
 
 
 @pytest.mark.parametrize("exporter", [CalcPackagePdf, CalcPackageHtml])
-def test_a_notebook_that_was_not_run_is_refused(unrun: Notebook, exporter: type) -> None:
+def test_a_notebook_that_was_not_run_is_refused(unrun: Notebook, exporter: Any) -> None:
     resources = {"metadata": {"name": "beam"}}
     with pytest.raises(UserError, match="beam: has not been run; run all cells, then save"):
-        exporter().from_notebook_node(nbformat.from_dict(unrun), resources)
+        exporter().from_notebook_node(node(unrun), resources)
 
 
 def test_an_edited_cell_is_refused(beam: Notebook) -> None:
     beam["cells"][2]["source"] = 'M_f = "400 kN.m"\nA_s = "2500 mm2"'
     with pytest.raises(UserError, match="was changed after it was run; run all cells, then save"):
-        CalcPackagePdf().from_notebook_node(nbformat.from_dict(beam))
+        CalcPackagePdf().from_notebook_node(node(beam))
 
 
 def test_listing_exporters_imports_nothing_heavy() -> None:
@@ -87,7 +93,7 @@ def test_nbconvert_prints_from_the_command_line(beam_file: Path) -> None:
 
 
 def test_nbconvert_fails_with_what_to_do(unrun: Notebook, tmp_path: Path) -> None:
-    nbformat.write(nbformat.from_dict(unrun), tmp_path / "beam.ipynb")
+    (tmp_path / "beam.ipynb").write_text(json.dumps(unrun), encoding="utf-8")
     command = [sys.executable, "-m", "nbconvert", "--to", "calc_package_html", "beam.ipynb"]
     done = subprocess.run(
         command, cwd=tmp_path, check=False, capture_output=True, text=True, timeout=120
@@ -100,11 +106,10 @@ def test_nbconvert_fails_with_what_to_do(unrun: Notebook, tmp_path: Path) -> Non
 def test_a_template_in_the_working_folder_changes_nothing(
     beam: Notebook, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
 ) -> None:
-    node = nbformat.from_dict(beam)
-    before, _ = CalcPackageHtml().from_notebook_node(node)
+    before, _ = CalcPackageHtml().from_notebook_node(node(beam))
     for name in ("calc_package_html", "templates", "."):
         (tmp_path / name).mkdir(exist_ok=True)
         (tmp_path / name / "package.html.j2").write_text("taken over")
         (tmp_path / name / "index.html.j2").write_text("taken over")
     monkeypatch.chdir(tmp_path)
-    assert CalcPackageHtml().from_notebook_node(node)[0] == before
+    assert CalcPackageHtml().from_notebook_node(node(beam))[0] == before

@@ -147,17 +147,17 @@ def record_doubly(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
 
 def doubly(steps: Steps, shape: Shape) -> Entry:
     """Record inside the open part neutral axis, forces and M_r with compression bars."""
+    if not steps.decide(double.IN_COMPRESSION):
+        raise UserError(
+            "compression_bars: they lie below the neutral axis and are not in compression; "
+            "leave them out: compression_bars = None"
+        )
     in_flange = shape == "rectangular" or bool(steps.decide(double.STAYS_IN_FLANGE))
     closing = double.CLOSES if in_flange else double.CLOSES_TEE
     steps.found(
         "c", strain.AXIS["compression bars"], closing, unit="mm", clause="10.1.2",
         title="Depth of the neutral axis, by equilibrium",
     )  # fmt: skip
-    if not steps.decide(double.IN_COMPRESSION):
-        raise UserError(
-            "compression_bars: they lie below the neutral axis and are not in compression; "
-            "leave them out: compression_bars = None"
-        )
     steps.lines(double.STRESS, double.FORCE, double.BLOCK)
     if not in_flange:
         return steps.line(double.M_R_TEE)

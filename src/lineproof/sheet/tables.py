@@ -32,10 +32,15 @@ class LookupTable:
             near = difflib.get_close_matches(str(key)[:20], self.rows, n=1)
             hint = f"; did you mean {near[0]!r}? There are" if near else "; write one of"
             raise UserError(
-                f"{what}: {echo(key)} is not a {self.word}{hint} {', '.join(self.rows)}"
+                f"{what}: {echo(key)} is not {article(self.word)} {self.word}{hint} {', '.join(self.rows)}"
             )
         return found
 
     def number(self, key: str, column: str) -> float:
         """Return one number of the table, in the column's unit."""
         return float(self.rows[key][column])
+
+
+def article(word: str) -> str:
+    """Return 'a' or 'an'."""
+    return "an" if word[0] in "aeiou" else "a"

@@ -71,12 +71,15 @@ STAYS_IN_FLANGE = _criterion(
     key="block-in-flange",
 )
 IN_COMPRESSION = _criterion(
-    "d_p <= c",
+    "alpha_1*phi_c*f_c*b*beta_1*d_p <= phi_s*A_s*f_y",
+    unit="kN",
     clause="10.1.6",
     title="Whether the upper bars are in compression",
     basis=MECHANICS,
-    yes="The upper bars lie above the neutral axis: they are in compression.",
-    no="The upper bars lie below the neutral axis: they are not in compression.",
+    yes="With the axis at the upper bars the concrete is too weak: the axis lies deeper, "
+    "the bars are in compression.",
+    no="With the axis at the upper bars the concrete is too strong: the axis lies higher, "
+    "the bars are not in compression.",
     key="upper-bars-in-compression",
 )
 CLOSES = _criterion(
