@@ -13,10 +13,11 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from http.client import HTTPConnection
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 import pytest
 
+from lineproof.notebook.read import read_calc
 from lineproof.package import records_in_html, records_in_pdf
 
 if TYPE_CHECKING:
@@ -60,6 +61,7 @@ def lab(beam_text: str, tmp_path_factory: pytest.TempPathFactory) -> Iterator[La
     command = [
         sys.executable, "-m", "jupyterlab", "--no-browser", "--allow-root",
         f"--ServerApp.port={port}", "--ServerApp.port_retries=0",
+        "--LabApp.expose_app_in_browser=True",
         f"--IdentityProvider.token={TOKEN}", f"--ServerApp.root_dir={folder}",
     ]  # fmt: skip
     log = home / "server.log"
@@ -118,7 +120,7 @@ def test_the_menu_route_downloads_the_page(lab: Lab) -> None:
 
 
 def test_a_calc_that_was_not_run_is_refused_with_what_to_do(
-    lab: Lab, unrun: dict[str, object]
+    lab: Lab, unrun: dict[str, Any]
 ) -> None:
     (lab.folder / "unrun.ipynb").write_text(json.dumps(unrun), encoding="utf-8")
     status, _, body = lab.get("nbconvert/calc_package_pdf/unrun.ipynb?download=true")
@@ -193,3 +195,27 @@ def test_nothing_is_cut_off_or_laid_over_its_neighbour(page: Page) -> None:
              .filter(cell => cell.scrollWidth > cell.clientWidth + 1).length"""
     )
     assert wider == 0
+
+
+def test_a_calc_run_and_saved_in_jupyterlab_can_be_exported(
+    lab: Lab, browser: Browser, unrun: dict[str, Any]
+) -> None:
+    path = lab.folder / "worked.ipynb"
+    path.write_text(json.dumps(unrun), encoding="utf-8")
+    made = browser.new_page(viewport={"width": 1400, "height": 2200})
+    try:
+        made.goto(f"http://127.0.0.1:{lab.port}/lab/tree/worked.ipynb?token={TOKEN}")
+        made.wait_for_selector(".jp-Notebook-ExecutionIndicator[data-status=idle]")
+        _command(made, "notebook:run-all-cells")
+        made.wait_for_selector("text=record of B1", timeout=PAGE_MILLISECONDS)
+        _command(made, "docmanager:save")
+    finally:
+        made.close()
+    calc = read_calc(path)
+    assert calc.record.entries["flexure/M_r"]["printed"]["result"] == "456"
+    status, _, body = lab.get("nbconvert/calc_package_pdf/worked.ipynb?download=true")
+    assert (status, body[:5]) == (200, b"%PDF-")
+
+
+def _command(page: Page, name: str) -> None:
+    page.evaluate(f"window.jupyterapp.commands.execute({name!r})")

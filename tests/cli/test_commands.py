@@ -204,6 +204,18 @@ def test_a_terminal_without_the_characters_shows_their_codes(
     assert r"width \u03b2" in done.stdout
 
 
+def test_stopping_a_run_writes_nothing(
+    beam_file: Path, capsys: Capture, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    def stopped(*_: object) -> None:
+        raise KeyboardInterrupt
+
+    monkeypatch.setattr("lineproof.cli.rerun.execute", stopped)
+    assert main(["issue", str(beam_file)]) == 130
+    assert capsys.readouterr().err.endswith("stopped; nothing has been written\n")
+    assert [path.name for path in beam_file.parent.iterdir()] == ["beam.ipynb"]
+
+
 def _paths() -> dict[str, str]:
     import os  # noqa: PLC0415 - only here
 

@@ -27,9 +27,7 @@ def _joined(inner: st.SearchStrategy[Tree]) -> st.SearchStrategy[Tree]:
         st.builds(Binary, st.just("**"), inner, power),
         st.builds(Negative, inner),
         st.builds(lambda f, x: Call(f, (x,)), st.sampled_from(["sqrt", "cbrt", "abs"]), inner),
-        st.builds(
-            lambda f, x: Call(f, (x,)), st.sampled_from(["sin", "cos", "tan", "cot"]), inner
-        ),
+        st.builds(lambda f, x: Call(f, (x,)), st.sampled_from(["sin", "cos", "tan", "cot"]), inner),
         st.builds(lambda f, x, y: Call(f, (x, y)), st.sampled_from(["min", "max"]), inner, inner),
     )
 

@@ -96,7 +96,18 @@ def test_towers_of_powers_are_plain_data_until_computed(text: str) -> None:
 
 @pytest.mark.parametrize(
     "text",
-    ["a", "a == b", "= b", "a =", "a = b = c", "a <= b", "1 = a", "a + b = c", "lambda = a", "a.b = c"],
+    [
+        "a",
+        "a == b",
+        "= b",
+        "a =",
+        "a = b = c",
+        "a <= b",
+        "1 = a",
+        "a + b = c",
+        "lambda = a",
+        "a.b = c",
+    ],
 )
 def test_a_line_is_one_symbol_one_sign_one_expression(text: str) -> None:
     with pytest.raises(UserError):
@@ -104,7 +115,8 @@ def test_a_line_is_one_symbol_one_sign_one_expression(text: str) -> None:
 
 
 @pytest.mark.parametrize(
-    "text", ["a", "a = b", "a == b", "a != b", "a <= b <= c", "<= b", "a <=", "a =< b", "a <> b", "a => b"]
+    "text",
+    ["a", "a = b", "a == b", "a != b", "a <= b <= c", "<= b", "a <=", "a =< b", "a <> b", "a => b"],
 )
 def test_a_criterion_has_one_comparison(text: str) -> None:
     with pytest.raises(UserError):

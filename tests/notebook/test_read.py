@@ -8,7 +8,7 @@ from typing import Any
 import pytest
 
 from lineproof.errors import UserError
-from lineproof.notebook.display import ANCHOR, METADATA
+from lineproof.notebook.display import ANCHOR, METADATA, cell_hash
 from lineproof.notebook.read import Calc, calc_of, read_calc
 from lineproof.record import MIME
 
@@ -126,6 +126,23 @@ def edited_input(notebook: Notebook) -> None:
     notebook["cells"][2]["source"] = 'M_f = "400 kN.m"\nA_s = "2500 mm2"'
 
 
+def input_tried_and_put_back(notebook: Notebook) -> None:
+    """Run the inputs with another value (6), the part (7), then put the old text back."""
+    for place in (GIVENS, FLEXURE):
+        note = outputs(notebook, place)[0]["metadata"][METADATA]
+        note["cells"] += ["a" * 12, "b" * 12]
+    notebook["cells"][2]["execution_count"] = 6
+
+
+def input_run_again(notebook: Notebook) -> None:
+    notebook["cells"][2]["execution_count"] = 8
+
+
+def cell_put_in(notebook: Notebook) -> None:
+    extra = {"cell_type": "code", "id": "x", "metadata": {}, "source": "f_y = 1", "outputs": []}
+    notebook["cells"].insert(3, extra | {"execution_count": None})
+
+
 def part_run_again(notebook: Notebook) -> None:
     outputs(notebook, FLEXURE)[0]["metadata"][METADATA]["part"] = "0" * 16
 
@@ -150,6 +167,9 @@ def run_out_of_order(notebook: Notebook) -> None:
         (hostile_formula, "__import__"),
         (failed_cell, "ended with an error: f_c: 'x' is no number"),
         (edited_input, 'cell 3 (M_f = "400 kN.m") was changed after it was run'),
+        (input_tried_and_put_back, 'cell 3 (M_f = "385 kN.m"'),
+        (input_run_again, "was run again after what stands below it"),
+        (cell_put_in, "cell 4 (f_y = 1) has not been run"),
         (part_run_again, "shows part 'flexure' otherwise than the record holds it"),
         (run_out_of_order, "were not run in the order of the cells"),
     ],
@@ -168,6 +188,13 @@ def test_all_faults_are_named_at_once(beam: Notebook) -> None:
     assert "was changed after it was run" in said
     assert "shows part 'shear'" in said
     assert "part 'flexure' of the record is shown by no cell" in said
+
+
+def test_a_part_run_again_without_change_is_not_stale(beam: Notebook) -> None:
+    beam["cells"][GIVENS]["execution_count"] = 6
+    source = "".join(beam["cells"][GIVENS]["source"])
+    outputs(beam, GIVENS)[0]["metadata"][METADATA]["cells"] += ["c" * 12, cell_hash(source)]
+    assert read(beam).record.calc_id == "B1"
 
 
 def test_outputs_without_metadata_are_taken_as_they_are(beam: Notebook) -> None:

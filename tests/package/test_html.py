@@ -130,7 +130,9 @@ def test_hostile_titles_come_out_literally(record: Record, title: str) -> None:
     page = to_html(build_package([record]))
     root = tree_of(page)
 
-    assert root.findtext("body/header/h1") == title
+    heading = root.findtext("body/header/h1") or ""
+    assert title.startswith(heading.removesuffix("…"))
+    assert len(heading) <= 300
     assert title in "".join(root.itertext())
     assert len(list(root.iter("script"))) == 1
     assert records_in_html(page) == [record]

@@ -94,6 +94,7 @@ def test_running_heads_are_cut() -> None:
     """An ellipsis shows that something is missing."""
     assert cut("short", 10) == "short"
     assert cut("a" * 20, 10) == "a" * 9 + "…"
+    assert len(cut("W" * 60, 56)) < 34
 
 
 def test_long_chains_break_and_keep_their_text() -> None:

@@ -31,6 +31,10 @@ from lineproof.quantity.digits import (
         (1.2345e-7, 3, "123e-9"),
         (2.3e-16, 1, "2e-16"),  # 200e-18 would show two digits too many
         (1.23e11, 2, "1.2e11"),
+        (12345.0, 2, "12e3"),  # 12000 would look like three digits or five
+        (345.0, 1, "3e2"),
+        (345.0, 2, "3.5e2"),
+        (300.0, 3, "300"),
         (999.6, 3, "1000"),
         (-26.14, 3, "-26.1"),
         (2.5, 1, "3"),  # half up, as on a pocket calculator

@@ -34,11 +34,12 @@ SHAPES: list[tuple[str, Callable[[float, float, float], float], str, tuple[float
 
 
 def _last_unit(text: str) -> float:
-    """Return one unit of the last digit of a printed number, zeros before the point not counted."""
+    """Return one unit of a printed number's last digit; after three, zeros may hold the place."""
     number = Decimal(text)
     if "." in text or "e" in text or not number:
         return float(Decimal(1).scaleb(int(number.as_tuple().exponent)))
-    return float(Decimal(1).scaleb(int(number.normalize().as_tuple().exponent)))
+    place = min(int(number.normalize().as_tuple().exponent), number.adjusted() - 2)
+    return float(Decimal(1).scaleb(max(0, place)))
 
 
 def _line(text: str, values: tuple[float, ...], unit: str = "") -> dict[str, Any]:
@@ -109,7 +110,11 @@ def test_results_print_in_their_unit_and_in_the_coherent_one(
         ("0 mm", None, {"result": "0", "unit": "mm"}),
         # 24 x 25.4 = 609.6 exactly; 5000 psi = 34.4738 MPa (NIST: 1 psi = 6.894757e-3 MPa)
         ("24 in", "mm", {"typed": "24", "typed_unit": "in", "result": "609.6", "unit": "mm"}),
-        ("5000 psi", "MPa", {"typed": "5000", "typed_unit": "psi", "result": "34.5", "unit": "MPa"}),
+        (
+            "5000 psi",
+            "MPa",
+            {"typed": "5000", "typed_unit": "psi", "result": "34.5", "unit": "MPa"},
+        ),
     ],
 )
 def test_givens_print_as_typed(typed: str, unit: str | None, printed: dict[str, str]) -> None:
@@ -137,7 +142,9 @@ NEAR = st.one_of(
 @pytest.mark.parametrize("unit", ["", "kN.m", "kip.ft"])
 @pytest.mark.parametrize("sign", SIGNS)
 @settings(max_examples=25, deadline=None)
-@given(st.floats(0.5, 9e5), NEAR, st.sampled_from(["a {} b", "a/b {} 1", "2*a {} a + b", "a - b {} 0"]))
+@given(
+    st.floats(0.5, 9e5), NEAR, st.sampled_from(["a {} b", "a/b {} 1", "2*a {} a + b", "a - b {} 0"])
+)
 def test_a_printed_comparison_has_the_recorded_truth(
     sign: str, unit: str, value: float, off: float, shape: str
 ) -> None:

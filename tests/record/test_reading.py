@@ -28,14 +28,12 @@ def test_round_trip(sample: Record) -> None:
     assert again.calc_id == "B7"
     assert [part["key"] for part in again.parts] == ["inputs", "flexure", "found"]
     assert next(iter(again.entries)) == "inputs/f_c"
-    assert repr(again) == f"record of B7: 20 lines, digest {sample.digest}"
+    assert repr(again) == f"record of B7: 21 lines, digest {sample.digest}"
     assert again._repr_mimebundle_() == {MIME: sample.data, "text/plain": repr(again)}
 
 
 def _entry(data: Data, entry_id: str) -> Data:
-    return next(
-        e for part in data["parts"] for e in part["entries"] if e["id"] == entry_id
-    )  # type: ignore[no-any-return]
+    return next(e for part in data["parts"] for e in part["entries"] if e["id"] == entry_id)  # type: ignore[no-any-return]
 
 
 def _nested(depth: int) -> Any:
@@ -145,7 +143,9 @@ def test_a_damaged_record_is_refused(
     with pytest.raises(UserError) as caught:
         Record.from_data(data)
     assert sentence in str(caught.value)
-    assert all(fault.startswith(("record: ", "formula ", "symbol ")) for fault in caught.value.faults)
+    assert all(
+        fault.startswith(("record: ", "formula ", "symbol ")) for fault in caught.value.faults
+    )
     assert max(len(fault) for fault in caught.value.faults) < 400
     assert time.perf_counter() - start < 1
 
@@ -196,7 +196,9 @@ JUNK = st.one_of(
 )  # fmt: skip
 
 
-@settings(max_examples=300, deadline=None, suppress_health_check=[HealthCheck.function_scoped_fixture])
+@settings(
+    max_examples=300, deadline=None, suppress_health_check=[HealthCheck.function_scoped_fixture]
+)
 @given(draw=st.data())
 def test_a_record_changed_at_random_is_read_or_refused(sample: Record, draw: st.DataObject) -> None:
     data = copy.deepcopy(sample.data)

@@ -188,10 +188,10 @@ def test_long_rows_break_before_signs_and_lose_nothing(limit: float) -> None:
 
 
 def test_a_mark_that_cannot_break_is_made_smaller() -> None:
-    """Half size is the limit."""
+    """There is a limit to how small it gets."""
     math = formula_math(parse_expression("(" + " + ".join(["a_bcdef"] * 30) + ")/2"), NOTATION)
 
     assert broken(math, 30.0) == (math,)
-    assert shrink(math, 30.0) == 0.5
+    assert shrink(math, 30.0) == 0.45
     assert shrink(symbol_math(NOTATION["a"]), 30.0) == 1.0
     assert width(value_math("551", "kN.m")) == pytest.approx(1.5 + 0.17 + 4 * 0.52)

@@ -153,12 +153,17 @@ def test_mathml_is_well_formed(formula: str) -> None:
     assert root.tag == "math"
 
 
+READ_BACK = (
+    "a - (b - c)", "a/(b*c)", "a/b/c", "a/(b/c)", "(a + b)*c", "(-a)**2", "a/b*c", "-(a - b)*c",
+    "a**(b - c)", "(a*b)**c", "a - b/c", "a*(b/c)", "-a**2",
+)  # fmt: skip
+
+
 def test_reading_a_formula_back_from_plain_text_gives_its_value() -> None:
     """Plain text with its brackets computes to the value of the tree (a = 7, b = 3, c = 2)."""
     values = {"a": 7.0, "b": 3.0, "c": 2.0}
     printed = {name: f"{value:g}" for name, value in values.items()}
-    for text in ("a - (b - c)", "a/(b*c)", "a/b/c", "a/(b/c)", "(a + b)*c", "(-a)**2", "a/b*c",
-                 "-(a - b)*c", "a**(b - c)", "(a*b)**c", "a - b/c", "a*(b/c)", "-a**2"):  # fmt: skip
+    for text in READ_BACK:
         shown = plain(substitution_math(parse_expression(text), printed))
         python = shown.replace(" x ", "*").replace("^", "**")
         expected = eval(text, {}, values)  # noqa: S307 - the texts above

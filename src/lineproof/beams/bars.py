@@ -52,6 +52,19 @@ def read_bars(name: str, text: object) -> BarLayers:
     layers = tuple(_read_layer(name, text, group) for group in str(text).split("/"))
     if len(layers) > MOST_LAYERS:
         raise UserError(f"{name}: {echo(text)} has {len(layers)} layers; write at most {MOST_LAYERS}")
+    if layers[-1].number > layers[0].number:
+        raise UserError(
+            f"{name}: {echo(text)} has more bars in the second layer than in the first, so they "
+            f"cannot stand in line; write for example '{layers[0]} / {layers[0]}'"
+        )
+    return layers
+
+
+def read_one_layer(name: str, text: object) -> BarLayers:
+    """Read bars that stand in one layer; raises :class:`UserError`."""
+    layers = read_bars(name, text)
+    if len(layers) > 1:
+        raise UserError(f"{name}: {echo(text)} has two layers; write one, such as '{layers[0]}'")
     return layers
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from lineproof.beams.flexure import confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
 from lineproof.beams.layout import BARS
 from lineproof.beams.steps import Steps
@@ -54,10 +55,14 @@ def record_materials(sheet: Sheet, density: str, grade: str, pair: CodePair) -> 
         sheet.line(stress_block.ALPHA_1)
         sheet.line(stress_block.BETA_1)
         for clause, what in pair.changed:
+            used = (
+                "the rule of A23.3-14 is used until the office confirms the value in its own copy."
+                if confirmed_value(sheet.project, pair) is None
+                else "the value that the office confirmed in its own copy is used."
+            )
             sheet.note(
                 f"changed-{clause.replace('.', '-')}",
-                f"{pair.concrete} changed clause {clause} ({what}). Its text is not known here: "
-                "the rule of A23.3-14 is used until the office confirms the value in its own copy.",
+                f"{pair.concrete} changed clause {clause} ({what}). Its text is not known here: {used}",
                 title=f"Clause {clause} of {pair.concrete}",
                 clause=clause,
                 basis=f"from memory of A23.3-14; changed in {pair.concrete}",
@@ -74,7 +79,10 @@ def _record_modulus(sheet: Sheet, density: str) -> None:
 def record_cover(sheet: Sheet, inputs: FloorBeamInputs) -> None:
     """Record cover for durability and for fire of the stirrups and the bottom bars."""
     with sheet.part(COVER, "Cover for durability and fire"):
-        steps = Steps(sheet, {n: sheet.entry(f"{BARS}/{n}") for n in ("d_bs", "d_b")})
+        bars_entries = sheet.entries_of(BARS)
+        diameters = [bars_entries[n] for n in ("d_b", "d_b2") if n in bars_entries]
+        thickest = max(diameters, key=lambda entry: entry.value)
+        steps = Steps(sheet, {"d_bs": bars_entries["d_bs"], "d_b": thickest})
         steps.line(cover.COVER_TO_BARS)
         for column in ("f_cmin", "c_min", "r_cb", "r_ca"):
             sheet.lookup(column, cover.EXPOSURES, inputs.exposure)

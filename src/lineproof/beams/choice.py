@@ -44,15 +44,18 @@ def _order(layers: BarLayers) -> tuple[int, float, int, int]:
     return len(sizes), area, len(layers), -sum(layer.number for layer in layers)
 
 
-def top_candidates(spread_area: float) -> Iterator[tuple[BarLayer, int]]:
-    """Give top bars in the web and bars per overhang for a least area there [mm2], best first."""
+def top_candidates(spread_area: float, sides: int) -> Iterator[tuple[BarLayer, int]]:
+    """Give top bars in the web and bars per overhang for a least area there [mm2], best first.
+
+    ``sides`` is the number of overhangs.
+    """
     found = [
         (BarLayer(n, size), bars_for(spread_area, size))
         for size in SIZES[:3]
         for n in range(2, MOST_BARS + 1)
     ]
     yield from sorted(
-        found, key=lambda c: (c[0].area + 2 * c[1] * BARS.number(c[0].size, "A_b"), c[0].number)
+        found, key=lambda c: (c[0].area + sides * c[1] * BARS.number(c[0].size, "A_b"), c[0].number)
     )
 
 

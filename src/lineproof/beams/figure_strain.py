@@ -86,8 +86,8 @@ def strain_stress_figure(
 ) -> Figure:
     """Draw section with compression zone, strain diagram and stress block.
 
-    ``compression`` holds one force, or two where the block reaches into the web (flange and web
-    apart). ``edge`` is cover plus stirrup diameter, for the place of the bars.
+    ``compression`` holds one force, or more where the block reaches into the web (flange and web
+    apart) or bars act in compression. ``edge`` is cover plus stirrup diameter, for the place of the bars.
     """
     shown = choose_scale(shape, SECTION_WIDTH, TALLEST)
     unit = 1.0 / shown.scale

@@ -9,6 +9,7 @@ from lineproof.beams.inputs import Shape
 from lineproof.beams.section import compression_zone
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
+from lineproof.quantity import echo
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import compression_steel as double
@@ -65,7 +66,11 @@ def record_required(sheet: Sheet, shape: Shape) -> None:
 
 
 def required(steps: Steps, shape: Shape) -> None:
-    """Record inside the open part the steel required for M_f."""
+    """Record inside the open part the steel required for M_f.
+
+    Raises :class:`UserError` where no reinforcement can do: the block would leave the section.
+    """
+    _refuse_overload(steps, shape)
     if shape != "rectangular":
         steps.line(clause.M_R_FLANGE_FULL)
         if not steps.decide(clause.NEEDS_FLANGE_ONLY):
@@ -77,6 +82,21 @@ def required(steps: Steps, shape: Shape) -> None:
             )
             return
     steps.lines(clause.BLOCK_REQUIRED, clause.A_S_REQUIRED)
+
+
+def _refuse_overload(steps: Steps, shape: Shape) -> None:
+    """Refuse a moment that even a block down to the bars does not balance."""
+    find = steps.sheet.find
+    b, b_w, h_f, d, M_f = (steps.place[n].value for n in ("b", "b_w", "h_f", "d", "M_f"))
+    stress = find("alpha_1").value * find("phi_c").value * find("f_c").value
+    most = stress * b_w * d * d / 2
+    if shape != "rectangular":
+        most += stress * (b - b_w) * h_f * (d - h_f / 2)
+    if M_f >= most:
+        raise UserError(
+            f"h: the concrete balances at most {most / 1e6:.0f} kN.m, but the factored moment is "
+            f"{M_f / 1e6:.0f} kN.m; write a deeper or wider beam"
+        )
 
 
 def record_flexure(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
@@ -117,13 +137,25 @@ def record_yield(steps: Steps, pair: CodePair) -> None:
 
 
 def confirmed_value(project: Mapping[str, Any], pair: CodePair) -> Mapping[str, Any] | None:
-    """Return the office's confirmed value of 10.5.2 for an edition that changed it."""
+    """Return the office's confirmed value of 10.5.2 for an edition that changed it.
+
+    Raises :class:`UserError` if it is not a ratio c/d, between 0 and 1.
+    """
     if not any(number == "10.5.2" for number, _ in pair.changed):
         return None
     for row in project.get("confirmed", ()):
         if row.get("clause") == "10.5.2" and row.get("edition") == pair.concrete and "value" in row:
+            _check_ratio(row["value"])
             return dict(row)
     return None
+
+
+def _check_ratio(value: object) -> None:
+    if not (isinstance(value, int | float) and 0 < value < 1):
+        raise UserError(
+            f"confirmed: value {echo(value)} of clause 10.5.2 is not a ratio c/d between 0 and 1; "
+            "write for example value = 0.5"
+        )
 
 
 def record_doubly(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
@@ -160,6 +192,7 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
     )  # fmt: skip
     steps.lines(double.STRESS, double.FORCE, double.BLOCK)
     if not in_flange:
+        steps.line(clause.FLANGE_FORCE)
         return steps.line(double.M_R_TEE)
     steps.line(double.CONCRETE_FORCE)
     return steps.line(double.M_R)

@@ -32,8 +32,10 @@ from lineproof.standards.a23_3 import bars as bar_clause
 from lineproof.standards.catalogue import NOTATION
 from lineproof.standards.codes import CodePair
 
+COMPRESSION_BARS = "compression-bars"
 SCOPE = "preliminary: flexure only"
 NOT_COVERED = (
+    {"check": "Concentrated live loads", "clause": "4.1.5.9"},
     {"check": "Shear and stirrups", "clause": "11.3"},
     {"check": "Torsion", "clause": "11.3.10"},
     {"check": "Deflection", "clause": "9.8"},
@@ -90,6 +92,10 @@ class FloorBeam:
         self._record_bars(self.sheet, layers)
         if self.inputs.bottom_bars is not None:
             refuse_unfit(self.sheet, layers, "bottom_bars")
+        if self.inputs.compression_bars is not None:
+            refuse_unfit(
+                self.sheet, self.inputs.compression_bars, "compression_bars", COMPRESSION_BARS
+            )
 
     def _record_bars(self, sheet: Sheet, layers: BarLayers) -> None:
         record_bars(
@@ -100,13 +106,17 @@ class FloorBeam:
             self._record_compression_bars(sheet, self.inputs.compression_bars[0])
 
     def _record_compression_bars(self, sheet: Sheet, layer: BarLayer) -> None:
-        with sheet.part("compression-bars", "Compression bars, counted at midspan"):
-            steps = Steps(sheet, {"d_bs": sheet.entry("bars/d_bs")})
+        with sheet.part(COMPRESSION_BARS, "Compression bars, counted at midspan"):
+            steps = Steps(sheet, {n: sheet.entry(f"{BARS}/{n}") for n in ("d_bs", "r_s")})
+            n_1 = sheet.given("n_1", str(layer.number), "number of compression bars")
             steps.bind(
                 d_b=sheet.lookup("d_b", bar_clause.BARS, layer.size),
                 A_b=sheet.lookup("A_b", bar_clause.BARS, layer.size),
-                n_1=sheet.given("n_1", str(layer.number), "number of compression bars"),
+                n_1=n_1,
+                n_b=n_1,
             )
+            steps.lines(bar_clause.LEAST_CLEAR, bar_clause.CLEAR)
+            steps.check(bar_clause.FITS)
             steps.lines(bar_clause.COMPRESSION_AREA, bar_clause.COMPRESSION_DEPTH)
 
     def _plausible(self) -> list[BarLayers]:
@@ -123,7 +133,9 @@ class FloorBeam:
 
     def _try_bottom(self, trial: Sheet, layers: BarLayers) -> None:
         self._record_bars(trial, layers)
-        if choice.failed_check(list(trial.parts)[-3:]) is not None:
+        # By key, not by place: a part of an earlier run may stand behind them.
+        laid = [p for p in trial.parts if p.key in (BARS, basics.COVER, COMPRESSION_BARS)]
+        if choice.failed_check(laid) is not None:
             return
         self._record_flexure(trial)
         record_minimum(trial, self.inputs.shape, self.inputs.minimum_rule)
@@ -158,15 +170,17 @@ class FloorBeam:
             record_free_ends(self.sheet)
             return
         given = self.inputs.top_bars
-        area = self._spread_area()
+        area, sides = self._spread_area(), 2 if self.inputs.shape == "T" else 1
         if given is not None:
             candidates = [(given[0], choice.bars_for(area, given[0].size))]
             web, overhang = candidates[0]
         else:
             web, overhang = choice.first_that_holds(
-                self.sheet, choice.top_candidates(area), self._try_top, "top_bars"
+                self.sheet, choice.top_candidates(area, sides), self._try_top, "top_bars"
             )
         record_top_steel(self.sheet, self.inputs, self.pair, web, overhang)
+        if given is not None:
+            refuse_unfit(self.sheet, given, "top_bars", TOP_STEEL)
 
     def _spread_area(self) -> float:
         if not self.inputs.slab:
@@ -203,6 +217,9 @@ class FloorBeam:
         return layers_on(self.sheet)
 
     def _top_layer(self) -> BarLayer:
+        counted = self.inputs.compression_bars
+        if counted is not None:
+            return counted[0]
         entries = self.sheet.entries_of(TOP_STEEL)
         if "n_1" not in entries:
             return BarLayer(2, "15M")

@@ -6,7 +6,7 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Any, Literal
 
-from lineproof.beams.bars import BarLayers, read_bars
+from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import QuantityInput, Typed, echo, internal_factor, read_quantity
 from lineproof.sheet import LookupTable
@@ -19,6 +19,7 @@ from lineproof.standards.nbc.loads import USES
 Shape = Literal["T", "L", "rectangular"]
 SHAPES = ("T", "L", "rectangular")
 ENDS = ("free", "cast with a girder", "cast with a column")
+SNOWED_ON = ("roof", "exterior balcony")
 MINIMUM_RULES = ("10.5.1.1", "10.5.1.2")
 
 
@@ -185,14 +186,15 @@ def read_floor_beam(
         },
         "density": take("density", row_of, DENSITY_FACTORS),
         "grade": take("grade", row_of, GRADES),
-        "use": take("use", row_of, USES),
+        "use": take("use", _use_inside),
         "exposure": take("exposure", row_of, EXPOSURES),
         "fire_rating": take("fire_rating", _fire_rating),
         "fire_aggregate": take("fire_aggregate", one_of, tuple(FIRE_SLAB.columns)),
         "stirrup": take("stirrup", row_of, STIRRUP_BENDS),
+        "bottom_bars": reader.take_if_given("bottom_bars", read_bars),
         **{
-            name: reader.take_if_given(name, read_bars)
-            for name in ("bottom_bars", "compression_bars", "top_bars")
+            name: reader.take_if_given(name, read_one_layer)
+            for name in ("compression_bars", "top_bars")
         },
         "ends": take("ends", one_of, ENDS),
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
@@ -215,6 +217,16 @@ def _fire_rating(name: str, given: QuantityInput) -> str:
     raise UserError(f"{name}: {echo(given)} is not in the table; write one of {', '.join(FIRE_COVER.rows)}")
 
 
+def _use_inside(name: str, given: object) -> str:
+    """Refuse uses in the open: their snow goes with the live load (NBC 4.1.3.2, cases 2 and 3)."""
+    if given in SNOWED_ON:
+        raise UserError(
+            f"{name}: {echo(given)} carries snow, which this beam does not take; write a use "
+            "inside the building"
+        )
+    return row_of(name, given, USES)
+
+
 def _no_openings(name: str, given: object) -> None:
     if given not in (None, "none", "", 0, False):
         raise UserError(
@@ -231,6 +243,8 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
         faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
     if shape == "L" and given["tributary_width"] is None:
         faults.add("tributary_width: an edge beam needs it; write for example '1.7 m'")
+    if fields["ends"] == "free" and given["top_bars"] is not None:
+        faults.add("top_bars: free ends have no moment to carry; leave them out: top_bars = None")
     cover = fields["cover"]
     if h_f is not None and cover is not None and h_f.value <= cover.value:
         faults.add(

@@ -54,9 +54,9 @@ def _record_second_layer(
     return sheet.line(bars.DEPTH_TWO_LAYERS)
 
 
-def refuse_unfit(sheet: Sheet, layers: BarLayers, name: str) -> None:
-    """Raise :class:`UserError` if given bars do not fit into the web."""
-    entries = sheet.entries_of(BARS)
+def refuse_unfit(sheet: Sheet, layers: BarLayers, name: str, part: str = BARS) -> None:
+    """Raise :class:`UserError` if the given bars of a part do not fit into the web."""
+    entries = sheet.entries_of(part)
     for key, layer in zip(("bars-fit", "bars-fit-2"), layers, strict=False):
         check = entries[key]
         if not check:

@@ -26,6 +26,14 @@ def record_loads(sheet: Sheet, inputs: FloorBeamInputs, *, figure: bool = True) 
         V_f = sheet.line(loads.SHEAR_SIMPLE)
         sheet.line(loads.REACTION_DEAD)
         sheet.line(loads.REACTION_LIVE)
+        if not inputs.slab:
+            sheet.note(
+                "floor-weight",
+                "Only the beam's own weight is computed: the weight of the floor that it carries "
+                "is part of the superimposed dead load given.",
+                title="Weight of the floor",
+                clause="4.1.4.1",
+            )
         sheet.note(
             "load-notes",
             "The live load is not reduced for tributary area. Companion snow, wind and earthquake "

@@ -21,6 +21,7 @@ from lineproof.sheet import Sheet
 
 LEVER_ARM: Runs = (*symbol("d"), (" − ", "roman"), *symbol("a"), ("/2", "roman"))
 LEVER_ARM_FLANGE: Runs = (*symbol("d"), (" − ", "roman"), *symbol("h", "f"), ("/2", "roman"))
+LEVER_ARM_BARS: Runs = (*symbol("d"), (" − ", "roman"), *symbol("d", "", "′"))
 
 
 def section_shape(sheet: Sheet, shape: Shape) -> SectionShape:
@@ -73,13 +74,19 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
     tension = sheet.find("phi_s").value * bars["A_s"].value * sheet.find("f_y").value
     strain = eps_cu * (d - c) / c
     h_f = sheet.find("h_f").value if shape != "rectangular" else 0.0
-    forces = [Force(_force_label("C", "", tension), a / 2, LEVER_ARM)]
+    forces, concrete = [], tension
+    if "C_s" in flexure:
+        C_s, d_p = flexure["C_s"].value, sheet.entry("compression-bars/d_p").value
+        forces, concrete = [Force(_force_label("C", "s", C_s), d_p, LEVER_ARM_BARS)], tension - C_s
     if "C_f" in flexure:
         C_f = flexure["C_f"].value
-        forces = [
+        forces += [
             Force(_force_label("C", "f", C_f), h_f / 2, LEVER_ARM_FLANGE),
-            Force(_force_label("C", "w", tension - C_f), a / 2, LEVER_ARM),
+            Force(_force_label("C", "w", concrete - C_f), a / 2, LEVER_ARM),
         ]
+    else:
+        sub = "c" if forces else ""
+        forces.append(Force(_force_label("C", sub, concrete), a / 2, LEVER_ARM))
     figure = strain_stress_figure(
         section_shape(sheet, shape),
         StressState(d, c, a, eps_cu, strain, in_unit(strain, "", 3)),

@@ -16,9 +16,9 @@ from lineproof.notebook.execute import execute
 from lineproof.notebook.read import (
     Calc,
     calc_of,
-    changed_cells,
     check_parameters,
     has_outputs,
+    stale_cells,
 )
 from lineproof.record import Record
 
@@ -97,10 +97,9 @@ def _rerun(stored: Stored, progress: Progress) -> Rerun:
 def report_changes(rerun: Rerun) -> list[str]:
     """Return what differs, as sentences; cells edited after their run come first."""
     name = rerun.path
-    edited = changed_cells(rerun.stored.cells)
     count = len({change.id for change in rerun.changes})
     return [
-        *(f"{name}: {cell.name} was changed after it was run" for cell in edited),
+        *(f"{name}: {sentence}" for sentence in stale_cells(rerun.stored.cells)),
         f"{name}: {count} {'line differs' if count == 1 else 'lines differ'} from a re-run",
         *(f"  {change}" for change in rerun.changes),
     ]

@@ -19,13 +19,14 @@ _KINDS = ("code", "markdown", "raw")
 
 @dataclass(frozen=True, slots=True)
 class Cell:
-    """A cell: its number from 1, kind, source, tags, outputs."""
+    """A cell: its number from 1, kind, source, tags, outputs, and its count if it was run."""
 
     number: int
     kind: str
     source: str
     tags: tuple[str, ...]
     outputs: tuple[Mapping[str, Any], ...]
+    count: int | None = None
 
     @property
     def name(self) -> str:
@@ -88,7 +89,15 @@ def _cell(number: int, raw: Mapping[str, Any]) -> Cell:
         if not isinstance(output["output_type"], str) or not isinstance(_data(output), Mapping):
             raise TypeError
     tags = raw.get("metadata", {}).get("tags", ())
-    return Cell(number, kind, joined(raw["source"]), tuple(map(str, tags)), outputs)
+    count = raw.get("execution_count")
+    return Cell(
+        number,
+        kind,
+        joined(raw["source"]),
+        tuple(map(str, tags)),
+        outputs,
+        count if isinstance(count, int) else None,
+    )
 
 
 def joined(text: str | list[str]) -> str:

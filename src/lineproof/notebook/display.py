@@ -49,8 +49,8 @@ def show(view: PartView) -> None:
 def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:
     """Return the MIME bundle of a part and its metadata.
 
-    ``ran`` holds the hashes of the cells run so far. They stand in the metadata with the part's
-    digest, so that a reader can tell outputs that are older than their cell.
+    ``ran`` holds the hashes of the cells run so far, by their counts. They stand in the metadata
+    with the part's digest, so that a reader can tell outputs that are older than their cells.
     """
     record = view.sheet.view(_up_to(view))
     part = record["parts"][-1]
@@ -95,10 +95,9 @@ def _shell() -> Any:
 
 
 def _cells_run(shell: Any) -> list[str]:
-    if shell is None:
-        return []
-    sources = [source for source in shell.history_manager.input_hist_raw if source.strip()]
-    return list(dict.fromkeys(map(cell_hash, sources)))
+    """Return the hash of every cell run so far; the place in the list is its count, from 1."""
+    history = getattr(shell, "history_manager", None)
+    return [cell_hash(source) for source in history.input_hist_raw[1:]] if history else []
 
 
 # -- plain text ------------------------------------------------------------------------------

@@ -153,8 +153,8 @@ def _check_fresh(
     name: str,
     faults: FaultList,
 ) -> None:
-    for cell in changed_cells(cells):
-        faults.add(f"{name}: {cell.name} was changed after it was run; {RUN_ALL}")
+    for sentence in stale_cells(cells):
+        faults.add(f"{name}: {sentence}; {RUN_ALL}")
     for key, anchor in anchors.items():
         made_from = anchor.note.get("part")
         if key in parts and made_from and made_from != part_digest(parts[key]):
@@ -164,36 +164,38 @@ def _check_fresh(
             )
 
 
-def _notes_of(cells: tuple[Cell, ...]) -> list[Mapping[str, Any]]:
-    """Return what the outputs of a notebook say of their making."""
-    notes = [
-        output.get("metadata", {}).get(METADATA, {})
-        for cell in cells
-        for output, _ in data_of(cell, ANCHOR)
-    ]
-    return [note for note in notes if isinstance(note, Mapping)]
+def stale_cells(cells: tuple[Cell, ...]) -> list[str]:
+    """Say which code cells, up to the last part shown, are not those that the parts rest on.
 
-
-def changed_cells(cells: tuple[Cell, ...]) -> list[Cell]:
-    """Return the code cells that do not stand as they were run, up to the last part shown.
-
-    The outputs' metadata carry the hashes of the cells run; where a tool has stripped them,
-    nothing can be told.
+    The metadata of a part carry the hashes of the cells run before it, by their counts; where a
+    tool has stripped them, nothing can be told.
     """
-    ran = {
-        known
-        for note in _notes_of(cells)
-        for known in note.get("cells", ())
-        if isinstance(known, str)
-    }
-    if not ran:
-        return []
-    last = max((cell.number for cell in cells if any(data_of(cell, ANCHOR))), default=0)
-    return [
-        cell
-        for cell in cells[:last]
-        if cell.kind == "code" and cell.source.strip() and cell_hash(cell.source) not in ran
-    ]
+    history = {cell.number: ran for cell in cells if (ran := _ran_before(cell))}
+    said = []
+    for cell in cells:
+        later = [ran for number, ran in history.items() if number >= cell.number]
+        if cell.kind == "code" and cell.source.strip() and later:
+            said += _stale(cell, later, shows_part=any(data_of(cell, ANCHOR)))
+    return said
+
+
+def _stale(cell: Cell, later: list[list[str]], *, shows_part: bool) -> list[str]:
+    count = cell.count
+    if count is None:
+        return [f"{cell.name} has not been run"]
+    known = {ran[count - 1] for ran in later if 0 < count <= len(ran)}
+    if known - {cell_hash(cell.source)}:
+        return [f"{cell.name} was changed after it was run"]
+    # A part run again is told by its digest; any other cell must be older than what follows.
+    if not shows_part and min(map(len, later)) < count:
+        return [f"{cell.name} was run again after what stands below it"]
+    return []
+
+
+def _ran_before(cell: Cell) -> list[str]:
+    notes = [output.get("metadata", {}).get(METADATA) for output, _ in data_of(cell, ANCHOR)]
+    lists = [note["cells"] for note in notes if isinstance(note, Mapping) and "cells" in note]
+    return [str(known) for known in lists[0]] if lists and isinstance(lists[0], list) else []
 
 
 def _walk(cells: tuple[Cell, ...]) -> tuple[tuple[str, str], ...]:

@@ -191,10 +191,8 @@ def _filters() -> dict[str, Any]:
 
 
 def _length_class(title: str) -> str:
-    """Name the size of a title: long ones are set smaller, since all of it is printed."""
-    if len(title) < 90:  # noqa: PLR2004 - about two lines
-        return "title"
-    return "long" if len(title) < 500 else "very-long"  # noqa: PLR2004 - about half a page
+    """Name the size of a title: long ones are set smaller."""
+    return "title" if len(title) < 90 else "long"  # noqa: PLR2004 - about two lines
 
 
 def _verdict(calc: Calc) -> str:

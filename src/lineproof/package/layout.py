@@ -13,6 +13,9 @@ WORKING_WIDTH = 33.0
 """Width of the working column, in em of its text."""
 RESULT_WIDTH = 11.5
 _HEAD_MOST = 12.0
+_INDENT = 2.0
+_SURELY_ONE_LINE = 0.8
+_WIDE, _CAPITAL, _OTHER = 1.8, 1.3, 1.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -26,28 +29,33 @@ class Piece:
 
 @dataclass(frozen=True, slots=True)
 class FittedChain:
-    """A chain as the printers lay it out: left side, then pieces that wrap between each other."""
+    """A chain as the printers lay it out: left side, then pieces that wrap between each other.
+
+    ``wraps`` tells that it may need more than one line.
+    """
 
     lead: str
     head: tuple[Piece, ...]
     pieces: tuple[Piece, ...]
+    wraps: bool
 
 
 def fitted(chain: Chain) -> FittedChain:
     """Break a chain; a long left side stands on lines of its own before the rest."""
     head_width = width(chain.head)
-    room = WORKING_WIDTH - head_width
-    if head_width > _HEAD_MOST:
-        room = WORKING_WIDTH - 2
+    long_head = head_width > _HEAD_MOST
+    room = WORKING_WIDTH - (_INDENT if long_head else head_width)
     pieces = [part for piece in chain.pieces for part in broken(piece, room)]
-    if head_width > _HEAD_MOST:
-        return FittedChain(
-            chain.lead,
-            (),
-            tuple(_piece(m, room) for m in (*broken(chain.head, room), *pieces)),
-        )
+    heads = [chain.head]
+    if long_head:
+        pieces = [*broken(chain.head, room), *pieces]
+        heads = []
+    total = sum(map(width, heads + pieces))
     return FittedChain(
-        chain.lead, (_piece(chain.head, room),), tuple(_piece(part, room) for part in pieces)
+        chain.lead,
+        tuple(_piece(part, room) for part in heads),
+        tuple(_piece(part, room) for part in pieces),
+        wraps=total > _SURELY_ONE_LINE * WORKING_WIDTH,
     )
 
 
@@ -63,7 +71,14 @@ def _piece(math: Math, room: float) -> Piece:
 def cut(text: str, longest: int) -> str:
     """Cut a text for a running head; an ellipsis shows that something is missing.
 
-    >>> cut("Gallery floor beam", 8)
+    ``longest`` counts characters of usual width; capitals and wide letters count for more.
+
+    >>> cut("Gallery floor beam", 10)
     'Gallery…'
     """
-    return text if len(text) <= longest else text[: longest - 1].rstrip() + "…"
+    used = 0.0
+    for place, letter in enumerate(text):
+        used += _WIDE if letter in "MWmw@%" else _CAPITAL if letter.isupper() else _OTHER
+        if used > longest:
+            return text[: max(place - 1, 1)].rstrip() + "…"
+    return text

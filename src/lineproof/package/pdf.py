@@ -63,7 +63,7 @@ def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
     moment = dt.datetime(date.year, date.month, date.day, tzinfo=dt.UTC)
     try:
         made, warnings = _compiler().compile_with_warnings(
-            {"main.typ": source.encode(), "maths.typ": _library("maths.typ")},
+            source.encode(),
             format="pdf",
             sys_inputs={"texts": texts},
             pdf_standards=list(STANDARDS),
@@ -74,11 +74,6 @@ def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
     if warnings:
         raise PrintError("Typst: " + "; ".join(warning.message for warning in warnings))
     return bytes(made)
-
-
-@cache
-def _library(name: str) -> bytes:
-    return (folder("templates") / name).read_bytes()
 
 
 @cache

@@ -65,7 +65,7 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
 def _printed_order(reader: Any) -> dict[str, int]:
     """Return the place of each attachment as printed; the PDF's own lists go by name."""
     files = [file.get_object() for file in reader.root_object.get("/AF", [])]
-    places = ((str(file.get("/UF", "")), _PLACE.match(str(file.get("/Desc", "")))) for file in files)
+    places = [(str(f.get("/UF", "")), _PLACE.match(str(f.get("/Desc", "")))) for f in files]
     return {name: int(place[1]) for name, place in places if place}
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
@@ -174,7 +174,7 @@ def confirmations(record: Mapping[str, Any], rows: Rows, prefix: str) -> tuple[C
     return tuple(
         Confirmation(
             clause=item.get("clause", ""),
-            what=item.get("what", ""),
+            what=item.get("what") or "; ".join(_titles(item.get("lines", []), rows)),
             basis=item.get("basis", ""),
             confirmed=item.get("confirmed", ""),
             lines=tuple(
@@ -185,3 +185,7 @@ def confirmations(record: Mapping[str, Any], rows: Rows, prefix: str) -> tuple[C
         )
         for item in record.get("confirm", [])
     )
+
+
+def _titles(lines: Iterable[str], rows: Rows) -> list[str]:
+    return list(dict.fromkeys(rows[line].title for line in lines if line in rows))

@@ -15,7 +15,8 @@ MOST_DIGITS = 6
 ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
-_PLAIN_FROM, _PLAIN_BELOW = -4, 6
+PLAIN_FROM, PLAIN_BELOW = -4, 6
+"""Powers of ten between which numbers are written out."""
 _EXACT = Context(prec=400, rounding=ROUND_HALF_UP)
 
 
@@ -29,18 +30,22 @@ def significant(value: float | Decimal, digits: int) -> Decimal:
 def number_text(number: Decimal) -> str:
     """Return the printed text of a rounded decimal; powers of ten go by threes.
 
+    At least three digits stand before zeros that only hold the place: 12300, but 12e3.
+
     >>> number_text(Decimal("551e6")), number_text(Decimal("0.140")), number_text(Decimal(0))
     ('551e6', '0.140', '0')
-    >>> number_text(Decimal("2e-16"))
-    '2e-16'
+    >>> number_text(Decimal("2e-16")), number_text(Decimal("1.2e4"))
+    ('2e-16', '12e3')
     """
     if not number:
         return "0"
     exponent = number.adjusted()
-    if _PLAIN_FROM <= exponent < _PLAIN_BELOW:
+    rounded_away = int(number.as_tuple().exponent)
+    few = rounded_away > 0 and len(number.as_tuple().digits) < START_DIGITS
+    if PLAIN_FROM <= exponent < PLAIN_BELOW and not few:
         return f"{number:f}"
     power = exponent - exponent % 3
-    if int(number.as_tuple().exponent) > power:
+    if rounded_away > power:
         power = exponent  # 200e-18 would show digits that were rounded away
     return f"{number.scaleb(-power, _EXACT):f}e{power}"
 

@@ -13,6 +13,7 @@ from lineproof.formula.compiled import COMPARE, compile_tree
 from lineproof.quantity.digits import (
     ALL_DIGITS,
     MOST_DIGITS,
+    PLAIN_BELOW,
     START_DIGITS,
     Argument,
     Chosen,
@@ -224,8 +225,8 @@ def _argument_text(entry: Entry, argument: Argument, digits: int, system: System
 
 def _whole(exact: Decimal) -> Decimal:
     """Give an exact number its zeros back: 500e6, not 5e8."""
-    exponent = int(exact.as_tuple().exponent)
-    return exact if exponent <= 0 else exact.quantize(Decimal(1).scaleb(exponent - exponent % 3))
+    power = 0 if exact.adjusted() < PLAIN_BELOW else exact.adjusted() // 3 * 3
+    return exact.quantize(Decimal(1).scaleb(power)) if exact.as_tuple().exponent > power else exact
 
 
 def _coherent(value: float, unit: str, target: str, digits: int) -> dict[str, str] | None:

@@ -35,10 +35,11 @@ def rounds_to(text: str, value: float) -> bool:
     (True, False, True)
     """
     number = Decimal(text)
-    last = number.as_tuple().exponent if "." in text or "e" in text or not number else None
-    if last is None:
-        last = number.normalize().as_tuple().exponent
-    half = Decimal(5).scaleb(int(last) - 1)
+    last = int(number.as_tuple().exponent)
+    if "." not in text and "e" not in text and number:
+        # Zeros hold the place, but at least three digits are digits.
+        last = max(0, min(int(number.normalize().as_tuple().exponent), number.adjusted() - 2))
+    half = Decimal(5).scaleb(last - 1)
     # The last bits of the value are nobody's to judge.
     return abs(number - Decimal(value)) <= half + abs(Decimal(value)) * Decimal("1e-9")
 

@@ -98,5 +98,7 @@ def _packed(math: Math, limit: float) -> list[Math]:
 
 
 def shrink(math: Math, limit: float) -> float:
-    """Return by what a node that cannot break must be made smaller to fit, from 1 down to 0.5."""
-    return max(0.5, min(1.0, limit / max(width(math), 0.1)))
+    """Return by what a node that cannot break must be made smaller to fit, from 1 down to 0.45."""
+    needed = width(math)
+    # The estimate may be short by a tenth; a mark that nearly fits must not run over.
+    return 1.0 if needed <= limit else max(0.45, 0.9 * limit / needed)

@@ -146,7 +146,8 @@ def _origins(
     return tuple(
         Origin(source, labels.get(source, ""), symbol_math(symbol_of(name, notation)))
         for name, source in args.items()
-        if source in labels
+        # A figure or table names what it rests on by id; there is no symbol in it to trace.
+        if source in labels and "/" not in name
     )
 
 

@@ -82,9 +82,10 @@ IN_COMPRESSION = _criterion(
     "the bars are not in compression.",
     key="upper-bars-in-compression",
 )
+_TENSION = "phi_s*A_s*min(f_y, E_s*eps_cu*(d - c)/c)"
 CLOSES = _criterion(
     "abs(alpha_1*phi_c*f_c*b*beta_1*c + A_sp*(phi_s*min(f_y, E_s*eps_cu*(c - d_p)/c)"
-    " - alpha_1*phi_c*f_c) - phi_s*A_s*f_y) <= 0.001*phi_s*A_s*f_y",
+    f" - alpha_1*phi_c*f_c) - {_TENSION}) <= 0.001*{_TENSION}",
     clause="10.1.2",
     unit="kN",
     title="Equilibrium of the section",
@@ -94,7 +95,7 @@ CLOSES = _criterion(
 CLOSES_TEE = _criterion(
     "abs(alpha_1*phi_c*f_c*((b - b_w)*h_f + b_w*beta_1*c)"
     " + A_sp*(phi_s*min(f_y, E_s*eps_cu*(c - d_p)/c) - alpha_1*phi_c*f_c)"
-    " - phi_s*A_s*f_y) <= 0.001*phi_s*A_s*f_y",
+    f" - {_TENSION}) <= 0.001*{_TENSION}",
     clause="10.1.2",
     unit="kN",
     title="Equilibrium of the section, flange and web",
