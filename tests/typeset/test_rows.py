@@ -80,7 +80,8 @@ def test_empirical_numbers_are_named_with_their_units() -> None:
         NOTATION,
     )  # fmt: skip
 
-    assert row.remarks == ("Numbers of the formula: 4500 in √MPa.", "Basis: from memory.")
+    assert row.remarks == ("Numbers of the formula: 4500 in √MPa.",)
+    assert row.basis == ""
 
 
 def criterion(formula: str, left: str, right: str, *, holds: bool, **args: str) -> dict[str, Any]:
@@ -195,3 +196,33 @@ def test_a_mark_that_cannot_break_is_made_smaller() -> None:
     assert shrink(math, 30.0) == 0.45
     assert shrink(symbol_math(NOTATION["a"]), 30.0) == 1.0
     assert width(value_math("551", "kN.m")) == pytest.approx(1.5 + 0.17 + 4 * 0.52)
+
+
+def test_a_line_breaks_inside_brackets_only_when_it_must() -> None:
+    """Whole brackets stay together while they fit; else they open at their signs."""
+    text = "abs(a*b*c*d*a*b - a*b*c*d*a*b*c*d)"
+    math = formula_math(parse_expression(text), NOTATION)
+
+    assert broken(math, 40.0) == (math,)
+    pieces = [plain(piece) for piece in broken(math, 7.0)]
+    assert pieces == ["|a b c d a b", " - a b c d a b c d|"]
+
+
+def test_a_name_against_a_number_prints_as_one_comparison() -> None:
+    """No substitution stands between f'c ≤ 40 and its value."""
+    made = criterion("h_f <= 40", "32", "40", holds=True, h_f="32")
+
+    assert texts(printed_row(entry("decision", **made), NOTATION)) == ["h_f = 32 mm <= 40 mm"]
+    made = criterion("100 <= h_f", "100", "380", holds=True, h_f="380")
+    assert texts(printed_row(entry("check", **made), NOTATION)) == ["100 mm <= h_f = 380 mm"]
+
+
+@pytest.mark.parametrize(
+    ("basis", "printed"),
+    [("from memory", ""), ("mechanics", ""), ("Bentz 2006", "Bentz 2006")],
+)
+def test_basis_is_printed_where_it_says_more(basis: str, printed: str) -> None:
+    """Values from memory are gathered on one page instead."""
+    made = entry("note", text="x", basis=basis)
+
+    assert printed_row(made, NOTATION).basis == printed

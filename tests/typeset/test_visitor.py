@@ -176,3 +176,11 @@ def test_a_symbol_without_notation_is_made_from_its_id() -> None:
     tree = Binary("*", Name("gamma_c"), Number("0.5"))
 
     assert tex(formula_math(tree, Notation([]))) == r"{\gamma}_{\mathrm{c}} \times 0.5"
+
+
+def test_a_fraction_inside_a_fraction_keeps_its_size() -> None:
+    """Both printers set it in full size, or a hand checker could not read it."""
+    math = formula_math(parse_expression("a/(b + c/d)"), NOTATION)
+
+    assert '<mrow displaystyle="true" scriptlevel="0">' in mathml(math)
+    assert typst_tree(math)[2][0] == "display"  # type: ignore[index]

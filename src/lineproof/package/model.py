@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import json
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Any
 
 from lineproof.errors import FaultList, UserError
@@ -276,8 +276,18 @@ class _Builder:
             anchor=f"{self.prefix}part-{part['key']}",
             label=part.get("label", ""),
             title=part.get("title", ""),
-            rows=tuple(self.rows[entry["id"]] for entry in part["entries"]),
+            rows=_once_named([self.rows[entry["id"]] for entry in part["entries"]]),
         )
+
+
+def _once_named(rows: Iterable[PrintedRow]) -> tuple[PrintedRow, ...]:
+    """Name a basis where it begins, not again on the lines that share it."""
+    made = []
+    last = ""
+    for printed in rows:
+        made.append(replace(printed, basis="") if printed.basis == last else printed)
+        last = printed.basis
+    return tuple(made)
 
 
 def _levelled(prose: Prose, level: int) -> tuple[Prose, int]:

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import atexit
 import datetime as dt
+import shutil
 import tempfile
 import threading
 from functools import cache
@@ -79,7 +81,9 @@ def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
 @cache
 def _empty_root() -> Path:
     """Return a folder with nothing in it: what a template cannot see it cannot print."""
-    return Path(tempfile.mkdtemp(prefix="lineproof-"))
+    root = Path(tempfile.mkdtemp(prefix="lineproof-"))
+    atexit.register(shutil.rmtree, root, ignore_errors=True)
+    return root
 
 
 def _compiler() -> Any:

@@ -9,7 +9,7 @@ from typing import Any
 
 from lineproof.formula.grammar import parse_criterion, parse_line
 from lineproof.formula.notation import Notation
-from lineproof.formula.tree import Name, Tree, names_of
+from lineproof.formula.tree import Name, Number, Tree, names_of
 from lineproof.typeset.nodes import EQUALS, OPPOSITE, RELATIONS, Math, Sign, row
 from lineproof.typeset.plain import plain
 from lineproof.typeset.values import number_math, symbol_math, symbol_of, value_math
@@ -65,20 +65,20 @@ def line_chain(entry: Entry, notation: Notation) -> Chain:
 def criterion_chains(entry: Entry, notation: Notation) -> tuple[Chain, ...]:
     """Return a criterion as chains that are true as printed.
 
-    Two plain names give one chain, a = 26.1 mm ≤ h_f = 140 mm. Otherwise three: the criterion,
-    the substitution, both values. When the criterion does not hold, the values stand with the
-    opposite sign, and the criterion stands first as what was asked for.
+    Two plain names or numbers give one chain, a = 26.1 mm ≤ h_f = 140 mm. Otherwise three: the
+    criterion, the substitution, both values. When the criterion does not hold, the values stand
+    with the opposite sign, and the criterion stands first as what was asked for.
     """
     left, sign, right = _criterion_trees(entry["formula"])
     asked = RELATIONS[sign]
     true = asked if entry["holds"] else RELATIONS[OPPOSITE[sign]]
-    both_names = isinstance(left, Name) and isinstance(right, Name)
+    simple = isinstance(left, Name | Number) and isinstance(right, Name | Number)
     chains = []
-    if not (both_names and entry["holds"]):
+    if not (simple and entry["holds"]):
         sides = formula_math(left, notation), formula_math(right, notation)
         lead = "" if entry["holds"] else "asked"
         chains.append(Chain(sides[0], (row([asked, sides[1]]),), lead))
-    if both_names:
+    if simple:
         return (*chains, _named_values(entry, left, true, right, notation))
     numbers = [
         substitution_math(side, entry["printed"]["args"], notation) for side in (left, right)
@@ -101,5 +101,13 @@ def _values(entry: Entry) -> tuple[Math, Math]:
 
 def _named_values(entry: Entry, left: Tree, sign: Sign, right: Tree, notation: Notation) -> Chain:
     first, second = _values(entry)
-    names = formula_math(left, notation), formula_math(right, notation)
-    return Chain(names[0], (row([EQUALS, first]), row([sign, names[1]]), row([EQUALS, second])))
+    pieces: list[Math] = []
+    head = first
+    if isinstance(left, Name):
+        head = formula_math(left, notation)
+        pieces.append(row([EQUALS, first]))
+    if isinstance(right, Name):
+        pieces += [row([sign, formula_math(right, notation)]), row([EQUALS, second])]
+    else:
+        pieces.append(row([sign, second]))
+    return Chain(head, tuple(pieces))

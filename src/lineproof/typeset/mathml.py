@@ -19,6 +19,7 @@ from lineproof.typeset.nodes import (
     Thin,
     Unit,
     Word,
+    holds_fraction,
     prime_beside,
 )
 from lineproof.typeset.values import grouped, unit_text
@@ -46,6 +47,13 @@ def _is_tall(math: Math) -> bool:
     return False
 
 
+def _full_size(side: Math) -> str:
+    """Write a side of a fraction; a fraction inside it would else be set too small to read."""
+    if not holds_fraction(side):
+        return _write(side)
+    return f'<mrow displaystyle="true" scriptlevel="0">{_write(side)}</mrow>'
+
+
 def _text(text: str) -> str:
     return escape(printable(text))
 
@@ -55,7 +63,7 @@ def _write(math: Math) -> str:  # noqa: PLR0911 - one return per kind of node
         case Row(items):
             return f"<mrow>{''.join(map(_write, items))}</mrow>"
         case Fraction(top, bottom):
-            return f"<mfrac>{_write(top)}{_write(bottom)}</mfrac>"
+            return f"<mfrac>{_full_size(top)}{_full_size(bottom)}</mfrac>"
         case Root(of, ""):
             return f"<msqrt>{_write(of)}</msqrt>"
         case Root(of, index):
@@ -98,6 +106,9 @@ def _write_token(math: Math) -> str:  # noqa: PLR0911 - one return per kind of n
 def _sign(text: str, role: str) -> str:
     if role == "prefix":
         return f'<mo form="prefix">{_text(text)}</mo>'
+    if role in ("open", "close"):
+        form = "prefix" if role == "open" else "postfix"
+        return f'<mo stretchy="false" form="{form}">{_text(text)}</mo>'
     if text == ",":
         return _COMMA_SPACE
     if text == "/":

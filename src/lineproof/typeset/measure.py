@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
 from lineproof.typeset.nodes import (
     TIMES,
     Digits,
@@ -23,7 +25,8 @@ from lineproof.typeset.nodes import (
 from lineproof.typeset.values import grouped, unit_text
 
 _CHARACTER, _DIGIT, _SCRIPT, _FENCE, _ROOT = 0.52, 0.5, 0.7, 0.35, 0.75
-_SIGN_WIDTHS = {"relation": 1.35, "binary": 1.2, "prefix": 0.65, "comma": 0.45}
+_SIGN_WIDTHS = {"relation": 1.35, "binary": 1.2, "prefix": 0.65, "comma": 0.45,
+                "open": 0.35, "close": 0.35}  # fmt: skip
 _THIN = 0.17
 
 
@@ -65,7 +68,8 @@ def _token_width(math: Math) -> float:
 def broken(math: Math, limit: float) -> tuple[Math, ...]:
     """Break a row before its relation, plus, minus and multiplication signs so that lines fit.
 
-    Each piece is at most ``limit`` em wide where the marks allow it; relations break first.
+    Each piece is at most ``limit`` em wide where the marks allow it; relations break first, the
+    insides of brackets last.
     """
     if width(math) <= limit:
         return (math,)
@@ -87,14 +91,37 @@ def _parts(math: Math, roles: tuple[str, ...], but: str) -> list[Math]:
 def _packed(math: Math, limit: float) -> list[Math]:
     """Fill lines with whole terms, then, where a term is too long, with its factors."""
     lines: list[Math] = []
-    for term in _parts(math, ("binary",), TIMES):
-        fits = width(term) <= limit
-        for part in [term] if fits else _parts(term, ("binary",), ""):
-            if lines and width(lines[-1]) + width(part) <= limit:
-                lines[-1] = row([lines[-1], part])
-            else:
-                lines.append(part)
+    for part in _fitting(math, limit):
+        if lines and width(lines[-1]) + width(part) <= limit:
+            lines[-1] = row([lines[-1], part])
+        else:
+            lines.append(part)
     return lines
+
+
+def _fitting(math: Math, limit: float) -> Iterator[Math]:
+    """Give terms; of a term that is too long its factors; of such a factor its bracket's inside."""
+    for term in _parts(math, ("binary",), TIMES):
+        if width(term) <= limit:
+            yield term
+            continue
+        for part in _parts(term, ("binary",), ""):
+            opened = _opened(part)
+            if width(part) <= limit or opened == part:
+                yield part
+            else:
+                yield from _fitting(opened, limit)
+
+
+def _opened(math: Math) -> Math:
+    """Take brackets apart so that a line may break inside them."""
+    nodes: list[Math] = []
+    for item in items_of(math):
+        if isinstance(item, Fence):
+            nodes += [Sign(item.left, "open"), item.of, Sign(item.right, "close")]
+        else:
+            nodes.append(item)
+    return row(nodes)
 
 
 def shrink(math: Math, limit: float) -> float:

@@ -10,7 +10,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Literal
 
-Role = Literal["binary", "relation", "prefix", "comma"]
+Role = Literal["binary", "relation", "prefix", "comma", "open", "close"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -36,7 +36,7 @@ class Digits:
 
 @dataclass(frozen=True, slots=True)
 class Sign:
-    """An operator or relation sign, as the character that is printed."""
+    """An operator, relation sign or lone bracket, as the character that is printed."""
 
     text: str
     role: Role
@@ -139,6 +139,16 @@ def prime_beside(scripts: Scripts) -> Scripts:
     if scripts.sup is None or not all(isinstance(m, Prime) for m in items_of(scripts.sup)):
         return scripts
     return Scripts(row([scripts.base, scripts.sup]), scripts.sub)
+
+
+def holds_fraction(math: Math) -> bool:
+    """Tell whether a fraction stands inside; beside another bar it keeps its full size."""
+    match math:
+        case Row(items):
+            return any(map(holds_fraction, items))
+        case Fence(of, _, _) | Root(of, _):
+            return holds_fraction(of)
+    return isinstance(math, Fraction)
 
 
 def items_of(math: Math) -> tuple[Math, ...]:

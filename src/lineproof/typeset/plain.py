@@ -57,7 +57,7 @@ def _write_token(  # noqa: C901, PLR0911 - one return per kind of node
             return "".join(_NAMES.get(c, c) for c in printable(text))
         case Digits(text):
             return text
-        case Sign(text, "prefix"):
+        case Sign(text, "prefix" | "open" | "close"):
             return _SIGNS.get(text, text)
         case Sign("/", _):
             return "/"

@@ -27,6 +27,7 @@ from lineproof.typeset.values import (
 
 Entry = Mapping[str, Any]
 
+_SILENT_BASES = frozenset({"", "from memory", "mechanics"})
 HOLDS, FAILS, ACCEPTED = "holds", "does not hold", "accepted, does not hold"
 
 
@@ -54,7 +55,8 @@ class PrintedRow:
 
     ``inputs`` are the values that a procedure was given, ``chains`` hold the working, ``result``
     the last piece ("M_r = 551 kN·m"), ``verdict`` the word for a check or decision, ``ratio`` its
-    printed utilisation, ``remarks`` short sentences in small print (source, basis, numbers).
+    printed utilisation, ``remarks`` short sentences in small print (source, numbers), ``basis``
+    what the line rests on, where that is a text of its own.
     """
 
     id: str
@@ -69,6 +71,7 @@ class PrintedRow:
     ratio: str = ""
     conclusion: str = ""
     remarks: tuple[str, ...] = ()
+    basis: str = ""
     origins: tuple[Origin, ...] = ()
     text: str = ""
     table: PrintedTable | None = None
@@ -115,14 +118,14 @@ def printed_row(
         "table": _table,
     }
     own = makers[entry["kind"]](entry, notation)
-    remarks = [*own.pop("remarks", ()), *_basis(entry)]
     return PrintedRow(
         id=entry["id"],
         kind=entry["kind"],
         label=entry.get("label", ""),
         title=_sentence_case(entry.get("title") or _meaning(entry, notation)),
         clause=entry.get("clause", ""),
-        remarks=tuple(remarks),
+        remarks=tuple(own.pop("remarks", ())),
+        basis=_basis(entry),
         origins=_origins(entry.get("args", {}), notation, labels or {}),
         **own,
     )
@@ -151,9 +154,13 @@ def _origins(
     )
 
 
-def _basis(entry: Entry) -> list[str]:
-    basis = entry.get("basis", "")
-    return [f"Basis: {basis}."] if basis else []
+def _basis(entry: Entry) -> str:
+    """Return the basis if it says more than the clause does.
+
+    Values from memory stand together on one page instead of marking every third line.
+    """
+    basis = str(entry.get("basis", ""))
+    return "" if basis in _SILENT_BASES else basis
 
 
 def _equation(entry: Entry, notation: Notation) -> Math:

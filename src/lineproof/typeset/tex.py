@@ -75,6 +75,8 @@ def _write_token(math: Math) -> str:  # noqa: PLR0911 - one return per kind of n
             return grouped(text, r"\,")
         case Sign(text, role):
             shown = _SIGNS.get(text, text)
+            if text == "|":
+                return r"\lvert " if role == "open" else r"\rvert "
             return f" {shown} " if role in _RELATION_SPACE else shown + " " * (text == ",")
         case Thin():
             return r"\,"

@@ -20,6 +20,7 @@ from lineproof.typeset.nodes import (
     Thin,
     Unit,
     Word,
+    holds_fraction,
     prime_beside,
 )
 from lineproof.typeset.values import grouped, unit_text
@@ -33,7 +34,7 @@ def typst_tree(math: Math) -> TypstTree:
         case Row(items):
             return ["row", *map(typst_tree, items)]
         case Fraction(top, bottom):
-            return ["frac", typst_tree(top), typst_tree(bottom)]
+            return ["frac", _full_size(top), _full_size(bottom)]
         case Root(of, index):
             return ["root", index, typst_tree(of)]
         case Scripts():
@@ -47,6 +48,10 @@ def typst_tree(math: Math) -> TypstTree:
         case Fence(of, left, right):
             return ["fence", left, typst_tree(of), right]
     return _token(math)
+
+
+def _full_size(side: Math) -> TypstTree:
+    return ["display", typst_tree(side)] if holds_fraction(side) else typst_tree(side)
 
 
 def _token(math: Math) -> TypstTree:  # noqa: PLR0911 - one return per kind of node

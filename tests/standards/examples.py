@@ -1,0 +1,94 @@
+"""One example in which each criterion holds and one in which it does not, arguments as printed.
+
+The comments give the arithmetic. Base sections are those of the independent checks 5a to 5c:
+18.143125 MPa is the stress of their block.
+"""
+
+from __future__ import annotations
+
+Given = dict[str, float]
+BLOCK: Given = {"alpha_1": 0.7975, "beta_1": 0.8825, "phi_c": 0.65, "f_c": 35, "eps_cu": 0.0035}
+STEEL: Given = {"phi_s": 0.85, "f_y": 400, "E_s": 200000}
+TEE: Given = {"b": 900, "b_w": 300, "h_f": 100}
+RECTANGLE: Given = {**BLOCK, **STEEL, "b": 350, "A_s": 2000, "d": 535}
+IN_WEB: Given = {**BLOCK, **STEEL, **TEE, "A_s": 7000, "d": 600}
+TOP: Given = {"A_sp": 1000, "d_p": 62}
+LAYERS: Given = {"A_s1": 1500, "d_1": 550, "A_s2": 500, "d_2": 490}
+LAYERS_TEE: Given = {"A_s1": 5000, "d_1": 620, "A_s2": 2000, "d_2": 550}
+
+EXAMPLES: dict[str, tuple[Given, Given]] = {
+    "materials.E_C_RULE": ({"f_c": 40}, {"f_c": 45}),
+    "stress_block.BALANCED_IN_FLANGE": ({"a_b": 140, "h_f": 140}, {"a_b": 141, "h_f": 140}),
+    "flexure.IN_FLANGE": ({"a": 26.1, "h_f": 140}, {"a": 150, "h_f": 140}),
+    "flexure.STRENGTH": ({"M_f": 327, "M_r": 327.4}, {"M_f": 328, "M_r": 327.4}),
+    # 340/535 = 0.6355; 341/535 = 0.6374; the limit for 400 MPa is 7/11 = 0.6364
+    "flexure.YIELDS": ({"c": 340, "d": 535, "c_d": 0.6364}, {"c": 341, "d": 535, "c_d": 0.6364}),
+    "flexure.NEEDS_FLANGE_ONLY": ({"M_f": 345, "M_rf": 3590}, {"M_f": 900, "M_rf": 898}),
+    "flexure.ENOUGH_STEEL": ({"A_sr": 1810, "A_s": 2000}, {"A_sr": 2010, "A_s": 2000}),
+    # A_s 4000: 1360 kN; flange 18.143125*900*100 = 1632.9 kN and the bars more: holds.
+    # A_s 7000: 2380 kN; bars at most 1000*(340 - 18) = 322 kN: 1632.9 + 322 < 2380.
+    "compression_steel.STAYS_IN_FLANGE": (
+        {**IN_WEB, **TOP, "A_s": 4000},
+        {**IN_WEB, **TOP},
+    ),
+    # 18.143125*300*0.8825*62 = 297.8 kN; A_s 3000: 1020 kN; A_s 800: 272 kN
+    "compression_steel.IN_COMPRESSION": (
+        {**RECTANGLE, **TOP, "b": 300, "A_s": 3000},
+        {**RECTANGLE, **TOP, "b": 300, "A_s": 800},
+    ),
+    # check 5c: c 145.3
+    "compression_steel.CLOSES": (
+        {**RECTANGLE, **TOP, "b": 300, "A_s": 3000, "d": 500, "c": 145.3},
+        {**RECTANGLE, **TOP, "b": 300, "A_s": 3000, "d": 500, "c": 147},
+    ),
+    # (2380000 - 321857 - 1088587.5)/(18.143125*300*0.8825) = 969555.5/4803.39 = 201.85
+    "compression_steel.CLOSES_TEE": (
+        {**IN_WEB, **TOP, "c": 201.85},
+        {**IN_WEB, **TOP, "c": 205},
+    ),
+    # 1.2*91 = 109.2 (Concrete Design Handbook, Example 2.2)
+    "minimum.BY_CRACKING": ({"M_cr": 91, "M_r": 420.1}, {"M_cr": 91, "M_r": 109}),
+    "minimum.BY_CRACKING_TOP": ({"M_crn": 91, "M_r": 420.1}, {"M_crn": 91, "M_r": 109}),
+    "minimum.BY_AREA": ({"A_smin": 759, "A_s": 2500}, {"A_smin": 1666, "A_s": 1600}),
+    # 4/3*300 = 400
+    "minimum.WAIVER": ({"M_f": 300, "M_r": 400.1}, {"M_f": 300, "M_r": 399.9}),
+    # 2*200 = 400; 1*200 = 200
+    "minimum.SPREAD": (
+        {"A_so": 212.8, "n_o": 2, "A_b": 200},
+        {"A_so": 212.8, "n_o": 1, "A_b": 200},
+    ),
+    "crack_control.CRACKS": ({"z": 21456, "z_max": 25000}, {"z": 25100, "z_max": 25000}),
+    "crack_control.NEEDS_SKIN": ({"h": 751}, {"h": 750}),
+    # 2*3*100 = 600; 2*2*100 = 400
+    "crack_control.SKIN_PROVIDED": (
+        {"A_sk": 531, "n_k": 3, "A_bk": 100},
+        {"A_sk": 531, "n_k": 2, "A_bk": 100},
+    ),
+    "crack_control.SKIN_CLOSE": ({"s_sk": 200}, {"s_sk": 201}),
+    "bars.FITS": ({"s_min": 35.28, "s_c": 58.9}, {"s_min": 35.28, "s_c": 17}),
+    "cover.DURABLE": ({"c_rs": 30, "c_c": 30}, {"c_rs": 40, "c_c": 30}),
+    "cover.DURABLE_BAR": ({"c_rb": 60, "c_b1": 71.3}, {"c_rb": 71.4, "c_b1": 71.3}),
+    "cover.FIRE_SAFE": ({"c_fire": 25, "c_b1": 41.3}, {"c_fire": 50, "c_b1": 41.3}),
+    "cover.FIRE_SAFE_SLAB": ({"h_fire": 130, "h_f": 140}, {"h_fire": 158, "h_f": 140}),
+    "cover.STRONG_ENOUGH": ({"f_cmin": 35, "f_c": 35}, {"f_cmin": 35, "f_c": 32}),
+    "cover.WIDE_ENOUGH": ({"b_w": 100}, {"b_w": 99}),
+    "cover.WIDE_ENOUGH_TWO_HOURS": ({"b_w": 140}, {"b_w": 139}),
+    "cover.WIDE_ENOUGH_THREE_HOURS": ({"b_w": 165}, {"b_w": 164}),
+    # check 5a: c 121.3; at 122: 18.143125*350*0.8825*122 = 683.7 against 680 kN, 0.5 %
+    "strain.equilibrium 0": ({**RECTANGLE, "c_l": 121.34}, {**RECTANGLE, "c_l": 122}),
+    # check 5b: c 237.264/0.8825 = 268.85; at 272: 15.1 kN more in 2380 kN, 0.6 %
+    "strain.equilibrium 1": ({**IN_WEB, "c_l": 268.85}, {**IN_WEB, "c_l": 272}),
+    # as 5a and 5b with the bars in two layers that yield: 0.0035*(490 - 121.3)/121.3 > 0.002
+    "strain.equilibrium 2": (
+        {**RECTANGLE, **LAYERS, "c_l": 121.34},
+        {**RECTANGLE, **LAYERS, "c_l": 122},
+    ),
+    "strain.equilibrium 3": ({**IN_WEB, **LAYERS_TEE, "c_l": 268.85}, {**IN_WEB, **LAYERS_TEE, "c_l": 272}),
+    # 680000*535 = 363.8 kN.m
+    "strain.MOMENT_BOUND": ({**RECTANGLE, "M_l": 363.7}, {**RECTANGLE, "M_l": 363.9}),
+    "strain.MOMENT_BOUND_PARABOLA": ({**RECTANGLE, "M_p": 363.7}, {**RECTANGLE, "M_p": 363.9}),
+    "strain.AXIS_BOUND_PARABOLA": ({"c_p": 121, "d": 535}, {"c_p": 536, "d": 535}),
+    # 0.1/327.4 = 0.03 %; 0.4/327.4 = 0.12 %
+    "strain.PROVED": ({"M_l": 327.5, "M_r": 327.4}, {"M_l": 327.8, "M_r": 327.4}),
+    "loads.LIVE_IS_ENOUGH": ({"q_Lmin": 4.8, "q_L": 5}, {"q_Lmin": 4.8, "q_L": 3}),
+}

@@ -1,0 +1,201 @@
+"""The catalogue, walked: every formula and criterion is proved, sourced and worked by hand."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Mapping
+from decimal import Decimal
+from functools import cache
+from typing import Any
+
+import mpmath
+import pytest
+import sympy
+from hypothesis import HealthCheck, assume, given, settings
+from hypothesis import strategies as st
+
+from lineproof.errors import UserError
+from lineproof.formula import Criterion, Formula
+from lineproof.formula.algebra import value_at
+from lineproof.formula.proof import prove, prove_criterion
+from lineproof.formula.tree import Negative, numbers_of, walk
+from lineproof.standards import catalogue
+from lineproof.standards.references import BASES
+
+from .examples import EXAMPLES
+from .worked import WORKED, Worked
+from .worked_flexure import WORKED_FLEXURE
+
+FORMULAS = dict(catalogue.formulas())
+CRITERIA = dict(catalogue.criteria())
+ALL_WORKED = (*WORKED, *WORKED_FLEXURE)
+LONGEST = 400
+
+# Printed units in N, mm and MPa, written here apart from the package's own list.
+IN_N_MM = {
+    "": 1.0, "mm": 1.0, "m": 1e3, "mm2": 1.0, "mm4": 1.0, "MPa": 1.0, "N/mm": 1.0, "kPa": 1e-3,
+    "kN": 1e3, "kN/m": 1.0, "kN/m3": 1e-6, "kN.m": 1e6, "kg/m3": 1.0,
+}  # fmt: skip
+
+
+def units_of(names: tuple[str, ...]) -> dict[str, str]:
+    """Return the unit that the notation gives each name."""
+    return {name: catalogue.NOTATION[name].unit for name in names}
+
+
+def internal(given: Mapping[str, float], names: tuple[str, ...]) -> list[float]:
+    """Return printed values in N, mm, MPa, in the order of the names."""
+    return [given[name] * IN_N_MM[catalogue.NOTATION[name].unit] for name in names]
+
+
+def calculate(text: str) -> float:
+    """Evaluate a plain calculation of the worked numbers."""
+    scope = {"sqrt": math.sqrt, "min": min, "max": max, "__builtins__": {}}
+    return float(eval(text, scope))  # noqa: S307 - text of this test, not of a user
+
+
+def last_digit(number: str) -> float:
+    """Return one unit of the last written digit: 0.01 for 3.55, 1e6 for 5.000e9."""
+    exponent = Decimal(number).as_tuple().exponent
+    assert isinstance(exponent, int)
+    return 10.0**exponent
+
+
+@pytest.mark.parametrize("place", FORMULAS)
+def test_formula_is_complete(place: str) -> None:
+    """Units proved, clause and basis given, declared constants used, names in the notation."""
+    formula = FORMULAS[place]
+    assert set(formula.names) | {formula.symbol} <= set(catalogue.NOTATION)
+    prove(formula, units_of(formula.names))
+    assert formula.unit == catalogue.NOTATION[formula.symbol].unit
+    _is_described(formula, numbers_of(formula.tree))
+
+
+@pytest.mark.parametrize("place", CRITERIA)
+def test_criterion_is_complete(place: str) -> None:
+    """As for a formula; and its key can name a line, its sentences end."""
+    criterion = CRITERIA[place]
+    assert set(criterion.names) <= set(catalogue.NOTATION)
+    prove_criterion(criterion, units_of(criterion.names))
+    _is_described(criterion, (*numbers_of(criterion.left), *numbers_of(criterion.right)))
+    assert criterion.key.replace("-", "").replace("_", "").isalnum()
+    for sentence in filter(None, (criterion.yes, criterion.no)):
+        assert sentence.endswith(".")
+    assert bool(criterion.yes) == bool(criterion.no)
+
+
+def _is_described(source: Formula | Criterion, constants: tuple[str, ...]) -> None:
+    assert source.clause.strip()
+    assert source.title.strip()
+    assert source.basis in BASES
+    assert set(source.numbers) <= set(constants)
+    assert len(source.text) <= LONGEST
+
+
+def test_every_module_lists_all_it_declares() -> None:
+    """A formula or criterion left out of its module's list would escape this walk."""
+    for module in catalogue._MODULES:
+        values = [v for n, v in vars(module).items() if not n.startswith("_")]
+        listed = {id(v) for n in ("FORMULAS", "CRITERIA", "TABLES") for v in getattr(module, n, ())}
+        for value in values:
+            if type(value).__name__ in ("Formula", "Criterion", "LookupTable"):
+                assert id(value) in listed, (module.__name__, getattr(value, "text", value))
+
+
+@pytest.mark.parametrize("place", dict(catalogue.tables()))
+def test_table_is_complete(place: str) -> None:
+    """Every row has every column as a positive number; clause, source and basis are given."""
+    table = dict(catalogue.tables())[place]
+    assert table.clause
+    assert table.source
+    assert table.basis in BASES
+    for row in table.rows.values():
+        assert set(row) <= set(table.columns)
+        assert all(float(number) > 0 for number in row.values())
+
+
+def test_every_formula_has_a_worked_number() -> None:
+    """And no worked number is left of a formula that is gone."""
+    assert {row.place for row in ALL_WORKED} == set(FORMULAS)
+
+
+@pytest.mark.parametrize("row", ALL_WORKED, ids=lambda row: row.place)
+def test_worked_number(row: Worked) -> None:
+    """The formula gives the number worked out by hand, to its last written digit."""
+    formula = FORMULAS[row.place]
+    assert row.source
+    assert set(row.given) == set(formula.names)
+    *steps, result = row.chain.split(" = ")
+    assert steps
+    for step in steps:
+        assert calculate(step) == pytest.approx(float(result), abs=0.6 * last_digit(result), rel=3e-5)
+    found = formula.function(*internal(row.given, formula.names)) / IN_N_MM[formula.unit]
+    assert found == pytest.approx(float(result), abs=0.6 * last_digit(result))
+
+
+def test_every_criterion_has_examples() -> None:
+    """And no example is left of a criterion that is gone."""
+    assert set(EXAMPLES) == set(CRITERIA)
+
+
+@pytest.mark.parametrize("place", CRITERIA)
+def test_criterion_holds_and_fails(place: str) -> None:
+    """One example holds, one does not."""
+    criterion = CRITERIA[place]
+    truths = []
+    for example in EXAMPLES[place]:
+        values = internal(example, criterion.names)
+        left, right = (side(*values) for side in criterion.functions)
+        truths.append(criterion.holds(left, right))
+    assert truths == [True, False]
+
+
+@pytest.mark.parametrize("place", FORMULAS)
+@settings(
+    max_examples=8, deadline=None, derandomize=True, database=None,
+    suppress_health_check=list(HealthCheck),
+)  # fmt: skip
+@given(data=st.data())
+def test_compiled_equals_sympy(place: str, data: st.DataObject) -> None:
+    """The compiled function and sympy, read from the text apart, agree to 1e-12.
+
+    Arguments lie within 0.6 to 1.6 times a worked example of the formula. The bound is on the sum
+    of all terms taken positive: what a difference cancels, no float can keep.
+    """
+    formula = FORMULAS[place]
+    near = next(row.given for row in ALL_WORKED if row.place == place)
+    at = internal(near, formula.names)
+    values = [data.draw(st.floats(0.6 * v, 1.6 * v)) for v in at]
+    try:
+        found = formula.function(*values)
+    except ValueError:
+        with pytest.raises(UserError):
+            value_at(formula.tree, dict(zip(formula.names, values, strict=True)))
+        return
+    mpmath.mp.dps = 50
+    exact = float(_by_sympy(formula.text)(*[mpmath.mpf(v) for v in values]))
+    scale = _sum_of_terms(formula, values)
+    assume(abs(exact) > 1e-3 * scale)
+    assert abs(found - exact) <= 1e-12 * scale
+    assert value_at(formula.tree, dict(zip(formula.names, values, strict=True))) == exact
+
+
+@cache
+def _by_sympy(text: str) -> Callable[..., Any]:
+    """Return the right side of a formula as an mpmath function, parsed by sympy itself."""
+    right = text.partition("=")[2]
+    names = next(f.names for f in FORMULAS.values() if f.text == text)
+    scope: dict[str, object] = {name: sympy.Symbol(name) for name in names}
+    scope |= {"max": sympy.Max, "min": sympy.Min}
+    made: Callable[..., Any] = sympy.lambdify(
+        [scope[n] for n in names], sympy.sympify(right, locals=scope, rational=True), "mpmath"
+    )
+    return made
+
+
+def _sum_of_terms(formula: Formula, values: list[float]) -> float:
+    scope = dict(zip(formula.names, values, strict=True))
+    text = formula.text.partition("=")[2].replace(" - ", " + ")
+    assert not any(isinstance(node, Negative) for node in walk(formula.tree))
+    functions = {"sqrt": math.sqrt, "min": max, "max": max, "__builtins__": {}}
+    return float(eval(text, functions, scope))  # noqa: S307 - text of the catalogue
