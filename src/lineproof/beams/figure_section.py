@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Literal
 
+from lineproof.beams.section_shape import BarRow, SectionShape, SlabBars
 from lineproof.drawing import (
     LIGHT,
     TEXT_SIZE,
@@ -35,35 +36,6 @@ LOWEST_WITH_WHOLE_FLANGE = 36.0
 BREAK_PAST = 2.0
 CALLOUT_REACH = 9.0
 SHORTEST_STUB = 26.0
-
-
-@dataclass(frozen=True, slots=True)
-class SectionShape:
-    """Concrete outline, mm: a rectangle, a T, or an L whose flange lies to the right of the web."""
-
-    kind: Literal["rectangle", "T", "L"]
-    b_w: float
-    h: float
-    b_f: float = 0.0
-    h_f: float = 0.0
-
-    @property
-    def overhangs(self) -> tuple[float, float]:
-        """Flange beyond the web, left and right, mm."""
-        if self.kind == "rectangle":
-            return (0.0, 0.0)
-        beyond = self.b_f - self.b_w
-        return (beyond / 2, beyond / 2) if self.kind == "T" else (0.0, beyond)
-
-
-@dataclass(frozen=True, slots=True)
-class BarRow:
-    """Bars in one horizontal row: ``depth`` of their centres below the top face, mm."""
-
-    count: int
-    diameter: float
-    depth: float
-    label: str
 
 
 @dataclass(frozen=True, slots=True)
@@ -174,6 +146,17 @@ def bars(shape: SectionShape, rows: Sequence[BarRow], edge: float) -> list[Circl
     return circles
 
 
+def slab_bars(shape: SectionShape, shown: Shown, row: SlabBars) -> list[Circle]:
+    """Draw the top bars spread in the overhangs, evenly over their width as far as it is drawn."""
+    y = shape.h - row.depth
+    circles = []
+    for face, way, stub in ((0.0, -1.0, shown.left), (shape.b_w, 1.0, shown.right)):
+        step = min(row.width, stub) / row.count
+        places = [face + way * (number + 0.5) * step for number in range(row.count)] if stub else []
+        circles.extend(Circle((x, y), row.diameter / 2, "bars") for x in places)
+    return circles
+
+
 def stirrup(
     shape: SectionShape, cover: float, diameter: float, radii: tuple[float, float]
 ) -> list[Shape]:
@@ -214,6 +197,7 @@ class _Content:
     stirrup_label: str
     bottom: Sequence[BarRow]
     top: Sequence[BarRow]
+    slab: SlabBars | None = None
 
     @property
     def edge(self) -> float:
@@ -234,6 +218,7 @@ def section_figure(
     stirrup_label: str = "",
     bottom: Sequence[BarRow] = (),
     top: Sequence[BarRow] = (),
+    slab: SlabBars | None = None,
     centroid: float | None = None,
     caption: str = "Section",
     alt: str = "",
@@ -244,7 +229,7 @@ def section_figure(
     of the gross centroid below the top face. The alternative text is written from the numbers
     unless one is given.
     """
-    content = _Content(d, cover, stirrup_diameter, stirrup_label, bottom, top)
+    content = _Content(d, cover, stirrup_diameter, stirrup_label, bottom, top, slab)
     reach = (
         CALLOUT_REACH + 2.0 + max(text_width(words(label), TEXT_SIZE) for label in content.labels)
     )
@@ -256,7 +241,7 @@ def section_figure(
     width = left + (shape.b_w + shown.right) * shown.scale + right
     shapes = [
         *outline(shape, shown),
-        *_steel(shape, content),
+        *_steel(shape, shown, content),
         *_dimensions(shape, shown, content),
         *_callouts(shape, shown, content),
         *_centroid(shape, shown, centroid, content.edge),
@@ -296,7 +281,7 @@ def _upright(shape: SectionShape, shown: Shown) -> bool:
     return shape.h_f * shown.scale >= _slab_text(shape) + FIT_MARGIN
 
 
-def _steel(shape: SectionShape, content: _Content) -> list[Shape]:
+def _steel(shape: SectionShape, shown: Shown, content: _Content) -> list[Shape]:
     """Stirrup, its corners bent to the bars that stand in them, and the bars."""
     bottom, top = content.bottom, content.top
     low, high = (
@@ -304,7 +289,9 @@ def _steel(shape: SectionShape, content: _Content) -> list[Shape]:
     )
     loop = content.stirrup_diameter > 0.0
     links = stirrup(shape, content.cover, content.stirrup_diameter, (low, high)) if loop else []
-    return [*links, *bars(shape, bottom, content.edge), *bars(shape, top, content.edge)]
+    beside = slab_bars(shape, shown, content.slab) if content.slab else []
+    rows = [*bars(shape, bottom, content.edge), *bars(shape, top, content.edge)]
+    return [*links, *rows, *beside]
 
 
 def _note(shown: Shown, centre: float) -> Text:

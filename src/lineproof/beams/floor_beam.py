@@ -202,7 +202,7 @@ class FloorBeam:
         layers = self._layers()
         M_r = sheet.entry(f"{FLEXURE}/M_r")
         with sheet.part("summary", "Section and state at the resistance"):
-            record_section_figure(sheet, shape, layers, self.inputs.stirrup, self._top_layer())
+            record_section_figure(sheet, shape, layers, self.inputs.stirrup, sheet.entries_of(TOP_STEEL))
             record_strain_figure(sheet, shape, layers)
         if self.inputs.compression_bars is None:
             A_s = midspan(sheet, shape).place["A_s"]
@@ -215,15 +215,6 @@ class FloorBeam:
     def _layers(self) -> BarLayers:
         """Return the bottom bars as they stand on the sheet."""
         return layers_on(self.sheet)
-
-    def _top_layer(self) -> BarLayer:
-        counted = self.inputs.compression_bars
-        if counted is not None:
-            return counted[0]
-        entries = self.sheet.entries_of(TOP_STEEL)
-        if "n_1" not in entries:
-            return BarLayer(2, "15M")
-        return BarLayer(round(entries["n_1"].value), entries["d_b"].source.row)
 
 
 def layers_on(sheet: Sheet) -> BarLayers:

@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayers
 from lineproof.beams.figures import (
     BarRow,
     Force,
     MomentLevel,
     SectionShape,
+    SlabBars,
     StressState,
     capacity_figure,
     section_figure,
@@ -43,15 +44,15 @@ def bottom_rows(bars: dict[str, Entry], layers: BarLayers) -> list[BarRow]:
 
 
 def record_section_figure(
-    sheet: Sheet, shape: Shape, layers: BarLayers, stirrup: str, top: BarLayer | None
+    sheet: Sheet, shape: Shape, layers: BarLayers, stirrup: str, top: dict[str, Entry]
 ) -> None:
-    """Record the section to scale with its bars inside the open part."""
+    """Record the section to scale with its bars inside the open part.
+
+    ``top`` holds the entries of the part on top bars; without bars in it none are drawn.
+    """
     bars = sheet.entries_of("bars")
     cover, d_bs = sheet.entry("given/c_c"), bars["d_bs"]
-    rows = []
-    if top is not None:
-        depth = cover.value + d_bs.value + top.diameter / 2
-        rows = [BarRow(top.number, top.diameter, depth, str(top))]
+    rows, slab = _top_bars(sheet, top, cover.value + d_bs.value)
     figure = section_figure(
         section_shape(sheet, shape),
         d=bars["d"].value,
@@ -60,9 +61,25 @@ def record_section_figure(
         stirrup_label=f"{stirrup} stirrups",
         bottom=bottom_rows(bars, layers),
         top=rows,
+        slab=slab,
         caption="Section with bars, to scale",
     )
-    _record(sheet, "section", figure, [cover, *bars.values()])
+    _record(sheet, "section", figure, [cover, *bars.values(), *top.values()])
+
+
+def _top_bars(
+    sheet: Sheet, top: dict[str, Entry], edge: float
+) -> tuple[list[BarRow], SlabBars | None]:
+    if "n_1" not in top:
+        return [], None
+    count, diameter, size = round(top["n_1"].value), top["d_b"].value, top["d_b"].source.row
+    depth = edge + diameter / 2
+    beside = round(top["n_o"].value) if "n_o" in top else 0
+    label = f"{count}-{size}" + (f", {beside}-{size} beside" if beside else "")
+    row = BarRow(count, diameter, depth, label)
+    if not beside:
+        return [row], None
+    return [row], SlabBars(beside, diameter, depth, sheet.find("b_ot").value)
 
 
 def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:

@@ -84,7 +84,7 @@ class SectionStudy:
         sheet, shape = self.sheet, self.shape
         M_r = sheet.entry(f"{FLEXURE}/M_r")
         with sheet.part("summary", "Section and state at the resistance"):
-            record_section_figure(sheet, shape, self.layers, self.stirrup, None)
+            record_section_figure(sheet, shape, self.layers, self.stirrup, {})
             record_strain_figure(sheet, shape, self.layers)
         levels = [moment_level(sheet.entry(f"{SECTION}/M_cr"), "cr", "cracking moment", "dotted")]
         A_s = midspan(sheet, shape).place["A_s"]
