@@ -15,9 +15,7 @@ from lineproof.sheet import Sheet
 VALUES = {"phi_s": 0.85, "A_s": 2000.0, "f_y": 400.0, "d": 566.1, "a": 13.15}
 UNITS = {"phi_s": "", "A_s": "mm2", "f_y": "MPa", "d": "mm", "a": "mm"}
 LINES = 100
-MOMENTS = [
-    formula(f"M_{number} = phi_s*A_s*f_y*(d - a/2)", unit="kN.m") for number in range(LINES)
-]
+MOMENTS = [formula(f"M_{number} = phi_s*A_s*f_y*(d - a/2)", unit="kN.m") for number in range(LINES)]
 
 
 def bare(phi_s: float, A_s: float, f_y: float, d: float, a: float) -> float:

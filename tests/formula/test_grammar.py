@@ -60,7 +60,7 @@ def test_criteria() -> None:
 HOSTILE = [
     "__import__('os')", "__import__(os)", "a.__class__", "a.b", "().__class__.__bases__",
     "(lambda: 1)()", "lambda: 0", "[x for x in y]", "[1, 2]", "{1: 2}", "{1, 2}", "(1, 2)",
-    "f'{a}'", "'text'", "\"text\"", "b'x'", "f'c", "a if b else c", "a and b", "not a", "a or b",
+    "f'{a}'", "'text'", '"text"', "b'x'", "f'c", "a if b else c", "a and b", "not a", "a or b",
     "a == b", "a < b", "a := 1", "(a := 1)", "a # note", "a\n+ b", "a\\\n+b", "a\tb", "a; b",
     "a, b", "*a", "**a", "a[0]", "a @ b", "a % b", "a // b", "a & b", "a | b", "a ^ b", "~a",
     "+a", "a << 2", "sqrt(a, b)", "sqrt()", "sqrt(x=1)", "sqrt(*a)", "max(a)", "eval(a)",

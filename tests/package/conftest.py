@@ -8,7 +8,7 @@ from typing import Any
 import pytest
 
 from lineproof.beams.figure_loading import UniformLoad, loading_figure
-from lineproof.beams.figure_section import BarRow, SectionShape, section_figure
+from lineproof.beams.figures import BarRow, SectionShape, section_figure
 from lineproof.drawing import to_json
 from lineproof.formula import Notation, Symbol, criterion, formula
 from lineproof.record import Procedure

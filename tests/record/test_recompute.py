@@ -23,7 +23,7 @@ SRC = Path(__file__).resolve().parents[2] / "src"
 
 
 def _entry(data: Data, entry_id: str) -> Data:
-    return next(e for part in data["parts"] for e in part["entries"] if e["id"] == entry_id)  # type: ignore[no-any-return]
+    return next(e for part in data["parts"] for e in part["entries"] if e["id"] == entry_id)
 
 
 def _found(data: Data) -> set[tuple[str, str]]:

@@ -51,7 +51,9 @@ def read_bars(name: str, text: object) -> BarLayers:
     """
     layers = tuple(_read_layer(name, text, group) for group in str(text).split("/"))
     if len(layers) > MOST_LAYERS:
-        raise UserError(f"{name}: {echo(text)} has {len(layers)} layers; write at most {MOST_LAYERS}")
+        raise UserError(
+            f"{name}: {echo(text)} has {len(layers)} layers; write at most {MOST_LAYERS}"
+        )
     if layers[-1].number > layers[0].number:
         raise UserError(
             f"{name}: {echo(text)} has more bars in the second layer than in the first, so they "
@@ -78,5 +80,7 @@ def _read_layer(name: str, text: object, group: str) -> BarLayer:
     number, size = int(match[1]), match[2].upper()
     BARS.row(size, name)
     if number < 2:  # noqa: PLR2004 - one bar in each corner
-        raise UserError(f"{name}: {echo(text)} has a layer of {number}; write at least 2 bars a layer")
+        raise UserError(
+            f"{name}: {echo(text)} has a layer of {number}; write at least 2 bars a layer"
+        )
     return BarLayer(number, size)

@@ -4,10 +4,10 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
+from lineproof.beams.figures import MomentLevel
 from lineproof.beams.flexure import midspan, resistance
 from lineproof.beams.inputs import Shape
 from lineproof.beams.pictures import record_capacity_figure
-from lineproof.beams.figures import MomentLevel
 from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
@@ -85,7 +85,12 @@ def record_capacity(
 def _record_table(sheet: Sheet, shares: list[tuple[Entry, Entry, Entry]]) -> None:
     columns = ["Share of A_s,b, %", "A_s, mm²", "a, mm", "M_r, kN·m"]
     rows = [
-        [str(share), in_unit(A_s.value, "mm2", 4), in_unit(a.value, "mm", 3), in_unit(M_r.value, "kN.m", 3)]
+        [
+            str(share),
+            in_unit(A_s.value, "mm2", 4),
+            in_unit(a.value, "mm", 3),
+            in_unit(M_r.value, "kN.m", 3),
+        ]
         for (share, _), (A_s, a, M_r) in zip(SHARES, shares, strict=True)
     ]
     sheet.table(

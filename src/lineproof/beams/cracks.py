@@ -55,6 +55,6 @@ def _record_skin(sheet: Sheet, steps: Steps, kind: str) -> None:
 
 def _bars_each_face(place: Mapping[str, Entry], area: float) -> int:
     """Return the bars a face needs for the area and for a spacing of at most 200 mm."""
-    for_area = math.ceil(place["A_sk"].value / 2 / area)
-    for_spacing = math.ceil(place["h_sk"].value / clause.SKIN_SPACING_MOST)
+    for_area = math.ceil(float(place["A_sk"].value) / 2 / area)
+    for_spacing = math.ceil(float(place["h_sk"].value) / clause.SKIN_SPACING_MOST)
     return max(for_area, for_spacing, 1)

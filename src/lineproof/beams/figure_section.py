@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from typing import Literal
 
 from lineproof.beams.section_shape import BarRow, SectionShape, SlabBars
 from lineproof.drawing import (

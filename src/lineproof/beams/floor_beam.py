@@ -27,8 +27,9 @@ from lineproof.beams.section import SECTION, record_section
 from lineproof.beams.steps import Steps
 from lineproof.beams.top_steel import TOP_STEEL, record_free_ends, record_top_steel
 from lineproof.quantity import QuantityInput
-from lineproof.sheet import Sheet
+from lineproof.sheet import Sheet, Trial
 from lineproof.standards.a23_3 import bars as bar_clause
+from lineproof.standards.a23_3 import minimum
 from lineproof.standards.catalogue import NOTATION
 from lineproof.standards.codes import CodePair
 
@@ -183,10 +184,13 @@ class FloorBeam:
             refuse_unfit(self.sheet, given, "top_bars", TOP_STEEL)
 
     def _spread_area(self) -> float:
+        """Return the area of top bars that an overhang needs [mm2], from the clause itself."""
         if not self.inputs.slab:
             return 0.0
-        width = min(self.sheet.entry("section/b_o").value, self.sheet.entry("given/l").value / 20)
-        return 0.004 * width * self.sheet.entry("given/h_f").value
+        trial = Trial(self.sheet)
+        with trial.part("spread", "Top bars in the overhang"):
+            trial.line(minimum.SPREAD_WIDTH)
+            return float(trial.line(minimum.SPREAD_AREA).value)
 
     def _try_top(self, trial: Sheet, candidate: tuple[BarLayer, int]) -> None:
         web, overhang = candidate
@@ -202,7 +206,9 @@ class FloorBeam:
         layers = self._layers()
         M_r = sheet.entry(f"{FLEXURE}/M_r")
         with sheet.part("summary", "Section and state at the resistance"):
-            record_section_figure(sheet, shape, layers, self.inputs.stirrup, sheet.entries_of(TOP_STEEL))
+            record_section_figure(
+                sheet, shape, layers, self.inputs.stirrup, sheet.entries_of(TOP_STEEL)
+            )
             record_strain_figure(sheet, shape, layers)
         if self.inputs.compression_bars is None:
             A_s = midspan(sheet, shape).place["A_s"]

@@ -214,7 +214,9 @@ def _fire_rating(name: str, given: QuantityInput) -> str:
     for row in FIRE_COVER.rows:
         if abs(float(row.split()[0]) - hours) < 1e-9:  # noqa: PLR2004 - 45 min is 0.75 h
             return row
-    raise UserError(f"{name}: {echo(given)} is not in the table; write one of {', '.join(FIRE_COVER.rows)}")
+    raise UserError(
+        f"{name}: {echo(given)} is not in the table; write one of {', '.join(FIRE_COVER.rows)}"
+    )
 
 
 def _use_inside(name: str, given: object) -> str:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from lineproof.beams.figures import UniformLoad, loading_figure
 from lineproof.beams.inputs import FloorBeamInputs
-from lineproof.drawing import to_json
+from lineproof.drawing import Runs, to_json
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
 from lineproof.sheet import Sheet
@@ -80,7 +80,7 @@ def _record_figure(sheet: Sheet, parts: list[Entry], w_f: Entry, M_f: Entry, V_f
         for p in parts
         if p.value > 0
     ]
-    end = (("V", "italic"), ("f", "sub"), (f" = {in_unit(V_f.value, 'kN', 3)} kN", "roman"))
+    end: Runs = (("V", "italic"), ("f", "sub"), (f" = {in_unit(V_f.value, 'kN', 3)} kN", "roman"))
     width = sheet.entry("given/b_tr")
     span = sheet.entry("given/l")
     figure = loading_figure(
@@ -89,7 +89,11 @@ def _record_figure(sheet: Sheet, parts: list[Entry], w_f: Entry, M_f: Entry, V_f
         reactions=(end, end),
         note=f"tributary width {width.value / 1000:g} m; "
         f"factored {in_unit(w_f.value, 'kN/m', 3)} kN/m",
-        moment=(("M", "italic"), ("f", "sub"), (f" = {in_unit(M_f.value, 'kN.m', 3)} kN·m", "roman")),
+        moment=(
+            ("M", "italic"),
+            ("f", "sub"),
+            (f" = {in_unit(M_f.value, 'kN.m', 3)} kN·m", "roman"),
+        ),
         caption="Loads on the span, unfactored, and factored moment",
     )
     sheet.figure(

@@ -5,6 +5,7 @@ from __future__ import annotations
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import Shape
 from lineproof.beams.steps import Steps
+from lineproof.formula import Criterion, Formula
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import minimum
 
@@ -19,9 +20,7 @@ def record_minimum(sheet: Sheet, shape: Shape, rule: str) -> None:
         minimum_of(steps, rule, minimum.BY_CRACKING, minimum.WIDTH_WEB)
 
 
-def minimum_of(
-    steps: Steps, rule: str, by_cracking: minimum.Criterion, width: minimum.Formula
-) -> None:
+def minimum_of(steps: Steps, rule: str, by_cracking: Criterion, width: Formula) -> None:
     """Record inside the open part the waiver, or else the rule that the calc uses."""
     if steps.decide(minimum.WAIVER):
         return

@@ -30,8 +30,7 @@ def section_shape(sheet: Sheet, shape: Shape) -> SectionShape:
     b_w, h = sheet.find("b_w").value, sheet.find("h").value
     if shape == "rectangular":
         return SectionShape("rectangle", b_w, h)
-    kind = "T" if shape == "T" else "L"
-    return SectionShape(kind, b_w, h, sheet.find("b_f").value, sheet.find("h_f").value)
+    return SectionShape(shape, b_w, h, sheet.find("b_f").value, sheet.find("h_f").value)
 
 
 def bottom_rows(bars: dict[str, Entry], layers: BarLayers) -> list[BarRow]:
@@ -145,5 +144,9 @@ def record_capacity_figure(
 
 
 def _record(sheet: Sheet, key: str, figure: Figure, rests_on: list[Entry]) -> None:
-    values = [entry for entry in rests_on if entry.value is not None and not isinstance(entry.value, tuple)]
+    values = [
+        entry
+        for entry in rests_on
+        if entry.value is not None and not isinstance(entry.value, tuple)
+    ]
     sheet.figure(key, to_json(figure), title=figure.caption, alt=figure.alt, rests_on=values)

@@ -12,14 +12,16 @@ from lineproof.standards.a23_3 import strain
 SECOND_PATH = "second-path"
 
 
-def record_proof(steps: Steps, case: str, M_r: Entry, *, in_flange: bool) -> None:
+def record_proof(steps: Steps, case: str, M_r: Entry) -> None:
     """Record inside the open part neutral axis and moment by layers, and the check against M_r.
 
     ``case`` is ``one layer``, ``two layers`` or ``compression bars``.
     """
     if case in strain.LAYERED:
+        names = strain.AXIS[case].names
+        values = {n: steps.entry(n).value for n in names}
         steps.found(
-            "c_l", strain.AXIS[case], strain.CLOSINGS[case, in_flange], unit="mm",
+            "c_l", strain.AXIS[case], strain.closing(case, values), unit="mm",
             title="Depth of the neutral axis, by layers and strains", clause="10.1.2",
         )  # fmt: skip
     steps.found(
@@ -52,9 +54,8 @@ def record_second_path(sheet: Sheet, shape: Shape) -> None:
     if "C_s" in flexure:
         case = "compression bars"
         steps.bind(**{n: sheet.entry(f"compression-bars/{n}") for n in ("A_sp", "d_p")})
-    in_flange = flexure["a"].value <= steps.place["h_f"].value
     with sheet.part(SECOND_PATH, "Second path: layers and strains"):
-        record_proof(steps, case, flexure["M_r"], in_flange=in_flange)
+        record_proof(steps, case, flexure["M_r"])
         record_parabola(steps, case)
     prove_balanced(sheet, midspan(sheet, shape))
 
@@ -62,6 +63,5 @@ def record_second_path(sheet: Sheet, shape: Shape) -> None:
 def prove_balanced(sheet: Sheet, steps: Steps) -> None:
     """Record the proof of the balanced moment, all bars at d, in a part of its own."""
     steps.bind(A_s=sheet.entry("balanced/A_sb"))
-    in_flange = sheet.entry("balanced/a_b").value <= steps.place["h_f"].value
     with sheet.part("second-path-balanced", "Second path: balanced condition"):
-        record_proof(steps, "one layer", sheet.entry("balanced/M_rb"), in_flange=in_flange)
+        record_proof(steps, "one layer", sheet.entry("balanced/M_rb"))

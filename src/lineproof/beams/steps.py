@@ -3,14 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
+from typing import Any
 
 from lineproof.formula import Criterion, Formula
 from lineproof.record import Entry, Procedure
 from lineproof.sheet import Sheet
 
 
-def only(bound: Mapping[str, Entry], names: Iterable[str]) -> dict[str, Entry]:
-    """Return the bindings that are among the names."""
+def only(bound: Mapping[str, Entry], names: Iterable[str]) -> dict[str, Any]:
+    """Return the bindings that are among the names, to be passed on by keyword."""
     return {name: bound[name] for name in names if name in bound}
 
 
@@ -27,6 +28,11 @@ class Steps:
     def bind(self, **entries: Entry) -> None:
         """Let symbols stand for these entries from here on."""
         self.place.update(entries)
+
+    def entry(self, name: str) -> Entry:
+        """Return what a symbol stands for here."""
+        found = self.place.get(name)
+        return self.sheet.find(name) if found is None else found
 
     def line(self, formula: Formula, symbol: str = "", **bound: Entry) -> Entry:
         """Record a formula; what it gives stands for its symbol from here on."""

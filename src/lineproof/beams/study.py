@@ -16,7 +16,7 @@ from lineproof.beams.flexure import (
     resistance,
 )
 from lineproof.beams.floor_beam import prepare
-from lineproof.beams.inputs import SHAPES, InputReader, one_of, read_input, row_of
+from lineproof.beams.inputs import SHAPES, InputReader, Shape, one_of, read_input, row_of
 from lineproof.beams.layout import BARS, record_bars, refuse_unfit
 from lineproof.beams.pictures import moment_level, record_section_figure, record_strain_figure
 from lineproof.beams.second_path import SECOND_PATH, record_second_path
@@ -50,7 +50,9 @@ _SIZES = ("b_w", "h", "f_c", "gamma_c", "cover", "aggregate")
 class SectionStudy:
     """One section on a sheet; like a beam it keeps nothing but the sheet and its choices."""
 
-    def __init__(self, sheet: Sheet, shape: str, layers: BarLayers, stirrup: str, pair: CodePair) -> None:
+    def __init__(
+        self, sheet: Sheet, shape: Shape, layers: BarLayers, stirrup: str, pair: CodePair
+    ) -> None:
         self.sheet, self.shape, self.layers = sheet, shape, layers
         self.stirrup, self.pair = stirrup, pair
 
@@ -115,25 +117,31 @@ def section_study(
     given: dict[str, Any] = dict(locals())
     reader = InputReader(given)
     pair = reader.code_pair(sheet.project)
-    reader.take("shape", one_of, SHAPES)
+    section: Shape = reader.take("shape", one_of, SHAPES)
     read = {name: reader.take(name, read_input) for name in _SIZES}
     for name in ("b_f", "h_f"):
         if (given[name] is None) != (shape == "rectangular"):
-            reader.faults.add(f"{name}: give it for a T or an L section, leave it out for a rectangle")
+            reader.faults.add(
+                f"{name}: give it for a T or an L section, leave it out for a rectangle"
+            )
         read[name] = reader.take_if_given(name, read_input)
     layers = reader.take("bars", read_bars)
-    for name, table in (("grade", GRADES), ("stirrup", STIRRUP_BENDS), ("density", DENSITY_FACTORS)):
+    for name, table in (
+        ("grade", GRADES),
+        ("stirrup", STIRRUP_BENDS),
+        ("density", DENSITY_FACTORS),
+    ):
         reader.take(name, row_of, table)
     reader.smaller("b_w", "b_f", read)
     reader.smaller("h_f", "h", read)
     reader.smaller("cover", "h_f", read)
     reader.faults.raise_if_any()
-    return _start(sheet, shape, layers, stirrup, pair, read, density, grade)
+    return _start(sheet, section, layers, stirrup, pair, read, density, grade)
 
 
 def _start(
     sheet: Sheet,
-    shape: str,
+    shape: Shape,
     layers: BarLayers,
     stirrup: str,
     pair: CodePair,

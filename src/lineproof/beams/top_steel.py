@@ -58,7 +58,7 @@ def record_top_steel(
         steps.check(clause.STRENGTH)
         minimum_of(steps, inputs.minimum_rule, minimum.BY_CRACKING_TOP, _WIDTHS[shape])
         if proof:
-            record_proof(steps, "one layer", M_r, in_flange=True)
+            record_proof(steps, "one layer", M_r)
         if shape != "rectangular":
             steps.bind(h_f=sheet.entry("given/h_f"))
             steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
@@ -69,7 +69,9 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) 
     b_w, h = sheet.entry("given/b_w"), sheet.entry("given/h")
     steps = Steps(sheet, {"b": b_w, "b_w": b_w, "h_f": h})
     sheet.note("bars-text", _text(inputs.shape, web, overhang), title="Bars")
-    steps.line(loads.MOMENT_END_GIRDER if inputs.ends.endswith("girder") else loads.MOMENT_END_COLUMN)
+    steps.line(
+        loads.MOMENT_END_GIRDER if inputs.ends.endswith("girder") else loads.MOMENT_END_COLUMN
+    )
     entries = {
         "d_bs": sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b"),
         "r_s": sheet.lookup("r_s", bars.STIRRUP_BENDS, inputs.stirrup),

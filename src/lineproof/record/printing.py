@@ -226,7 +226,8 @@ def _argument_text(entry: Entry, argument: Argument, digits: int, system: System
 def _whole(exact: Decimal) -> Decimal:
     """Give an exact number its zeros back: 500e6, not 5e8."""
     power = 0 if exact.adjusted() < PLAIN_BELOW else exact.adjusted() // 3 * 3
-    return exact.quantize(Decimal(1).scaleb(power)) if exact.as_tuple().exponent > power else exact
+    wide = int(exact.as_tuple().exponent) > power
+    return exact.quantize(Decimal(1).scaleb(power)) if wide else exact
 
 
 def _coherent(value: float, unit: str, target: str, digits: int) -> dict[str, str] | None:

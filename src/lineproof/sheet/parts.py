@@ -65,7 +65,7 @@ class Parts:
         return self._find(name) if found is None else found
 
     def entries_of(self, key: str) -> dict[str, Entry]:
-        """Return the entries of a recorded part by symbol; names the call to run if it is missing."""
+        """Return the entries of a recorded part by symbol, or name the call to run first."""
         part = self._parts.get(key)
         if part is None:
             raise UserError(f"part {key!r} is not recorded{self._run_first(key)}")

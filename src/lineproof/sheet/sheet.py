@@ -12,7 +12,6 @@ from lineproof.formula import Criterion, Formula, Notation, Symbol, System, symb
 from lineproof.formula.notation import check_id
 from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
-from lineproof.quantity.units import UNITS, plain_spelling, units_of_kind
 from lineproof.record import Entry, Part, Procedure, Record
 from lineproof.record.build import build
 from lineproof.record.entry import (
@@ -28,6 +27,7 @@ from lineproof.record.entry import (
 )
 from lineproof.record.procedures import run
 from lineproof.record.sources import FoundSource, GivenSource, LookupSource, ShownSource
+from lineproof.sheet.kinds import typed_unit, unit_of_kind
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion, own_formula
 from lineproof.sheet.parts import Parts, check_key
@@ -114,9 +114,9 @@ class Sheet(Parts):
             unit = data.unit
         read = typed
         if not isinstance(read, Typed):
-            read = read_quantity(symbol, read, _typed_unit(symbol, read) if unit is None else unit)
+            read = read_quantity(symbol, read, typed_unit(symbol, read) if unit is None else unit)
         printed = read.unit if unit is None else unit
-        self._unit_of_kind(symbol, read.unit, printed)
+        unit_of_kind(symbol, read.unit, printed)
         made = GivenSource(data, read, printed, title or data.meaning, source, clause, basis)
         return self._record(Entry(self._open_part(), symbol, GIVEN, made, (), read.value))
 
@@ -190,7 +190,7 @@ class Sheet(Parts):
             prove(formula, self._units(formula.names, bound))
             unit = None
         if unit is not None:
-            unit = self._unit_of_kind(symbol or formula.symbol, unit, formula.unit)
+            unit = unit_of_kind(symbol or formula.symbol, unit, formula.unit)
         args = self._arguments(formula.names, bound)
         try:
             value = formula.function(*[a.value for a in args])
@@ -207,20 +207,10 @@ class Sheet(Parts):
             Entry(self._open_part(), name, LINE, formula, args, value, extra or None)
         )
 
-    def _unit_of_kind(self, name: str, unit: str, wanted: str) -> str:
-        """Return the spelling of a printed unit of the same kind as ``wanted``."""
-        found, kind = unit_named(unit), unit_named(wanted).kind
-        if found.kind != kind:
-            raise UserError(
-                f"{name}: {unit!r} is a unit of {found.kind}, but a {kind} is printed; "
-                f"write {', '.join(repr(u) for u in units_of_kind(kind)[:6])}"
-            )
-        return found.spelling
-
     def _check_notation(self, name: str, unit: str) -> None:
         """Hold to one symbol, one unit."""
         if name in self.notation:
-            self._unit_of_kind(name, unit, self.notation[name].unit)
+            unit_of_kind(name, unit, self.notation[name].unit)
 
     def _failed(
         self, source: Formula | Criterion, args: tuple[Entry, ...], error: Exception | None
@@ -416,14 +406,3 @@ class Sheet(Parts):
             parts, calc=self.calc, member=self.member, project=self.project, codes=self.codes,
             notation=self.notation, scope=self.scope, not_covered=self.not_covered,
         )  # fmt: skip
-
-
-def _typed_unit(symbol: str, typed: object) -> str:
-    """Take the unit from the text itself, for a symbol that no notation knows."""
-    if isinstance(typed, str):
-        tail = plain_spelling(typed.strip().lstrip("+-0123456789.eE"))
-        if tail in UNITS:
-            return tail
-    if isinstance(typed, str | int | float):
-        return ""
-    raise UserError(f"{symbol}: name the unit to print it in: unit='mm'")

@@ -32,7 +32,8 @@ class LookupTable:
             near = difflib.get_close_matches(str(key)[:20], self.rows, n=1)
             hint = f"; did you mean {near[0]!r}? There are" if near else "; write one of"
             raise UserError(
-                f"{what}: {echo(key)} is not {article(self.word)} {self.word}{hint} {', '.join(self.rows)}"
+                f"{what}: {echo(key)} is not {article(self.word)} {self.word}{hint} "
+                f"{', '.join(self.rows)}"
             )
         return found
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from typing import TypeVar
 
 from lineproof.formula import Criterion, Formula, Notation
 from lineproof.sheet import LookupTable
@@ -22,6 +23,8 @@ from lineproof.standards.a23_3 import (
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc import combinations, loads
 from lineproof.standards.nbc.notation import NOTATION as NBC
+
+Kind = TypeVar("Kind", Formula, LookupTable)
 
 NOTATION: Notation = A23_3 | NBC
 """Every symbol of the catalogue."""
@@ -50,7 +53,7 @@ def tables() -> Iterator[tuple[str, LookupTable]]:
     yield from _named(LookupTable)
 
 
-def _named(kind: type) -> Iterator[tuple[str, object]]:
+def _named(kind: type[Kind]) -> Iterator[tuple[str, Kind]]:
     for module in _MODULES:
         for name, value in vars(module).items():
             if isinstance(value, kind) and not name.startswith("_"):

@@ -127,9 +127,7 @@ COMPRESSION_DEPTH = _formula(
 DEPTH_ONE_LAYER = _formula(
     "d = h - c_c - d_bs - d_b/2", title="Effective depth", clause="2.3", basis=MECHANICS
 )
-AREA_OF_BARS = _formula(
-    "A_s = n_b*A_b", title="Area of the bars", clause="G30.18", basis=MECHANICS
-)
+AREA_OF_BARS = _formula("A_s = n_b*A_b", title="Area of the bars", clause="G30.18", basis=MECHANICS)
 TOTAL_AREA = _formula(
     "A_s = A_s1 + A_s2", title="Area of the bars", clause="G30.18", basis=MECHANICS
 )

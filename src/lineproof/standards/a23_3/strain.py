@@ -7,9 +7,10 @@ purpose: it shares no formula with them but the stress block itself.
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from functools import partial
+from itertools import pairwise
 
 from lineproof.errors import UserError
 from lineproof.formula import Criterion, criterion
@@ -19,7 +20,7 @@ from lineproof.standards.references import MECHANICS
 
 _criterion = partial(criterion, notation=NOTATION)
 
-STRIPS = 400
+STRIPS = 100
 PEAK_OF_PARABOLA = 0.9
 STRAIN_AT_PEAK = 0.002
 PARABOLA = (
@@ -99,7 +100,7 @@ def _cuts(section: Section, bottom: float) -> list[tuple[float, float]]:
     """Cut the depth into strips, none of them across the underside of the flange."""
     edges = [0.0, min(section.h_f, bottom), bottom]
     cuts = []
-    for top, end in zip(edges, edges[1:], strict=False):
+    for top, end in pairwise(edges):
         thickness = (end - top) / STRIPS
         if thickness > 0:
             cuts += [(top + (i + 0.5) * thickness, thickness) for i in range(STRIPS)]
@@ -127,9 +128,7 @@ def neutral_axis(
     return (low + high) / 2
 
 
-def _bar_force(
-    layer: Layer, steel: Steel, eps_cu: float, displaced: float, c: float
-) -> float:
+def _bar_force(layer: Layer, steel: Steel, eps_cu: float, displaced: float, c: float) -> float:
     """Return the force of a layer, tension positive [N]."""
     strain = eps_cu * (layer.depth - c) / c
     relief = displaced if strain < 0 else 0.0
@@ -152,7 +151,19 @@ def moment(
     return bars - concrete
 
 
-_MATERIALS = ("alpha_1", "beta_1", "phi_c", "f_c", "eps_cu", "b", "b_w", "h_f", "phi_s", "f_y", "E_s")
+_MATERIALS = (
+    "alpha_1",
+    "beta_1",
+    "phi_c",
+    "f_c",
+    "eps_cu",
+    "b",
+    "b_w",
+    "h_f",
+    "phi_s",
+    "f_y",
+    "E_s",
+)
 ONE_LAYER = ("A_s", "d")
 TWO_LAYERS = ("A_s1", "d_1", "A_s2", "d_2")
 WITH_COMPRESSION = ("A_s", "d", "A_sp", "d_p")
@@ -219,21 +230,20 @@ _BLOCK_FORCE = {
     True: "alpha_1*phi_c*f_c*b*beta_1*c_l",
     False: "alpha_1*phi_c*f_c*((b - b_w)*h_f + b_w*beta_1*c_l)",
 }
-_BAR_FORCE = {
+_AT_YIELD = "phi_s*A_s*f_y"
+_BY_STRAINS = {
     "one layer": "phi_s*A_s*min(f_y, E_s*eps_cu*(d - c_l)/c_l)",
     "two layers": "phi_s*(A_s1*min(f_y, E_s*eps_cu*(d_1 - c_l)/c_l)"
     " + A_s2*min(f_y, E_s*eps_cu*(d_2 - c_l)/c_l))",
 }
+_INNERMOST = {"one layer": "d", "two layers": "d_2"}
+LAYERED = tuple(_BY_STRAINS)
+"""Cases whose axis is found a second time; with compression bars it is found in the first path."""
 
 
-LAYERED = tuple(_BAR_FORCE)
-"""Cases whose neutral axis is found a second time; with compression bars it is found in the first."""
-
-
-def _closing(case: str, *, in_flange: bool) -> Criterion:
-    concrete, bars = _BLOCK_FORCE[in_flange], _BAR_FORCE[case]
+def _closing(concrete: str, bars: str) -> Criterion:
     return _criterion(
-        f"abs({concrete} - {bars}) <= 0.001*{concrete}",
+        f"abs({concrete} - {bars}) <= 0.001*{_AT_YIELD}",
         unit="kN",
         clause="10.1.2",
         title="Equilibrium of the section at the neutral axis found",
@@ -243,11 +253,28 @@ def _closing(case: str, *, in_flange: bool) -> Criterion:
 
 
 CLOSINGS = {
-    (case, in_flange): _closing(case, in_flange=in_flange)
-    for case in _BAR_FORCE
+    (case, in_flange, yields): _closing(
+        _BLOCK_FORCE[in_flange], _AT_YIELD if yields else _BY_STRAINS[case]
+    )
+    for case in _BY_STRAINS
     for in_flange in (True, False)
+    for yields in (True, False)
 }
-"""Closing criteria of the neutral axis by layers, by case and whether the block is in the flange."""
+"""Equilibrium at the axis found: by case, block in the flange or not, all bars at yield or not."""
+
+
+def closing(case: str, values: Mapping[str, float]) -> Criterion:
+    """Return the shortest criterion that closes the axis by layers for these values.
+
+    ``values`` holds the arguments of ``AXIS[case]`` in internal units.
+    """
+    made = AXIS[case]
+    axis = made.function(*[values[name] for name in made.names])
+    in_flange = values["beta_1"] * axis <= values["h_f"]
+    strain = values["eps_cu"] * (values[_INNERMOST[case]] - axis) / axis
+    yields = strain >= values["f_y"] / values["E_s"] * (1 - 1e-6)
+    return CLOSINGS[case, in_flange, yields]
+
 
 MOMENT_BOUND = _criterion(
     "M_l <= phi_s*A_s*f_y*d",
