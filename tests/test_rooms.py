@@ -46,7 +46,7 @@ def imported(path: Path, source: str) -> set[str]:
             above = package[: len(package) - node.level + 1] if node.level else []
             base = ".".join([*above, *([node.module] if node.module else [])])
             inner = {f"{base}.{alias.name}" for alias in node.names}
-            # `from lineproof import record` names a module, `from lineproof.record import Entry` not.
+            # `from lineproof import record` names a module, `from lineproof.record import X` not.
             found |= (inner & NAMES) | ({base} if inner - NAMES else set())
         elif isinstance(node, ast.Constant) and node.value in NAMES and node.value != "lineproof":
             found.add(node.value)  # import_module("lineproof.package")

@@ -201,12 +201,15 @@ def test_a_calc_run_and_saved_in_jupyterlab_can_be_exported(
     lab: Lab, browser: Browser, unrun: dict[str, Any]
 ) -> None:
     path = lab.folder / "worked.ipynb"
+    unrun["metadata"]["kernelspec"] = {"name": "python3", "display_name": "Python 3"}
     path.write_text(json.dumps(unrun), encoding="utf-8")
     made = browser.new_page(viewport={"width": 1400, "height": 2200})
     try:
-        made.goto(f"http://127.0.0.1:{lab.port}/lab/tree/worked.ipynb?token={TOKEN}")
+        place = "lab/workspaces/worked/tree/worked.ipynb"  # without the notebooks opened before
+        made.goto(f"http://127.0.0.1:{lab.port}/{place}?token={TOKEN}", timeout=PAGE_MILLISECONDS)
         made.wait_for_selector(".jp-Notebook-ExecutionIndicator[data-status=idle]")
         _command(made, "notebook:run-all-cells")
+        made.wait_for_timeout(8000); made.screenshot(path="/tmp/lab.png")
         made.wait_for_selector("text=record of B1", timeout=PAGE_MILLISECONDS)
         _command(made, "docmanager:save")
     finally:

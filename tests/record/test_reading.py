@@ -147,7 +147,7 @@ def test_a_damaged_record_is_refused(
         fault.startswith(("record: ", "formula ", "symbol ")) for fault in caught.value.faults
     )
     assert max(len(fault) for fault in caught.value.faults) < 400
-    assert time.perf_counter() - start < 1
+    assert time.perf_counter() - start < 5
 
 
 def test_all_faults_at_once(data: Data) -> None:
@@ -191,7 +191,8 @@ JUNK = st.one_of(
          "inputs/f_c", "__import__('os')", "\ud800", "sqrt(0-1) <= 9**9**9", "x = 1/0", "kip",
          "x = (0-1)**0.5", "min((0-1)**0.5, 1) <= 2", "1e400 mm", 10**400, 1e308, -0.0, "-", "−1"]
     ),
-    st.lists(st.integers(), max_size=2), st.dictionaries(st.text(max_size=3), st.integers(), max_size=2),
+    st.lists(st.integers(), max_size=2),
+    st.dictionaries(st.text(max_size=3), st.integers(), max_size=2),
     st.just([[[[]]]]), st.just({"a": {"b": {}}}),
 )  # fmt: skip
 

@@ -16,7 +16,7 @@ from lineproof.standards.a23_3 import flange, flexure, strain
 
 from .calculator import value
 
-few = settings(max_examples=40, deadline=None, derandomize=True, database=None)
+few = settings(max_examples=150, deadline=None, derandomize=True, database=None)
 E_S, EPS_CU, PHI_C, PHI_S = 200000.0, 0.0035, 0.65, 0.85
 
 

@@ -11,7 +11,7 @@ from hypothesis import strategies as st
 from lineproof.errors import UserError
 from lineproof.formula import criterion
 from lineproof.record import Record, procedure, recompute
-from lineproof.sheet import PartView, Sheet
+from lineproof.sheet import PartView, Sheet, Trial
 
 
 @procedure("half of a length", 1, "Half", ("h",))
@@ -152,7 +152,7 @@ def test_a_part_not_run_is_named_with_its_call(sheet: Sheet) -> None:
     with pytest.raises(UserError) as caught:
         sheet.close()
     assert caught.value.faults == ("B1: part 'flexure' has not been run; run beam.flexure()",)
-    with pytest.raises(UserError, match="run beam.flexure\\(\\) first"):
+    with pytest.raises(UserError, match=r"run beam.flexure\(\) first"):
         sheet.entry("flexure/M_r")
     with pytest.raises(UserError, match=r"x is not recorded \(not run yet: beam.flexure\(\)\)"), \
             sheet.part("p", "P"):  # fmt: skip
@@ -217,15 +217,17 @@ def test_keys(sheet: Sheet, key: str) -> None:
 
 
 def test_places_where_nothing_can_be_recorded(sheet: Sheet) -> None:
-    for record in (lambda: sheet.given("x", "1 mm"), lambda: sheet.line("x = b", unit="mm")):
-        with pytest.raises(UserError, match="nothing can be recorded outside a part"):
-            record()
+    with pytest.raises(UserError, match="nothing can be recorded outside a part"):
+        sheet.given("x", "1 mm")
+    with pytest.raises(UserError, match="nothing can be recorded outside a part"):
+        sheet.line("x = b", unit="mm")
     with pytest.raises(UserError, match="opened inside part 'p'"), sheet.part("p", "P"), \
             sheet.part("q", "Q"):  # fmt: skip
         pass
-    with pytest.raises(UserError, match="x stands twice in part 'p'"), sheet.part("p", "P"):
+    with sheet.part("p", "P"):
         sheet.given("x", "1 mm")
-        sheet.line("x = b", unit="mm")
+        with pytest.raises(UserError, match="x stands twice in part 'p'"):
+            sheet.line("x = b", unit="mm")
     with pytest.raises(UserError, match="'nowhere' is not recorded"):
         sheet.entry("nowhere")
 
@@ -248,3 +250,28 @@ def test_a_closed_part_is_shown(shown: list[str]) -> None:
     with pytest.raises(ZeroDivisionError), sheet.part("p", "P"):
         raise ZeroDivisionError
     assert shown == ["inputs"]
+
+
+def test_a_trial_leaves_the_sheet_alone(sheet: Sheet, shown: list[str]) -> None:
+    before = sheet.close().data
+    trial = Trial(sheet)
+    run_inputs(trial, "700 mm")
+    run_area(trial)
+    with trial.part("more", "More"):
+        assert trial.line("x = A/b", unit="mm").value == pytest.approx(700.0)
+    assert trial.find("A").value == pytest.approx(210_000.0)  # 300 x 700
+    assert sheet.find("A").value == pytest.approx(180_000.0)  # 300 x 600
+    assert shown == []
+    assert sheet.close().data == before
+
+
+def test_entries_of_a_part(sheet: Sheet) -> None:
+    sheet.expected = {"flexure": "beam.flexure()"}
+    assert list(sheet.entries_of("load")) == ["gamma", "w"]
+    with pytest.raises(UserError, match=r"^part 'flexure' is not recorded; run beam.flexure\(\)"):
+        sheet.entries_of("flexure")
+    with sheet.part("p", "P"):
+        own = sheet.given("h", "500 mm")
+        assert sheet.find("h") is own
+    with pytest.raises(UserError, match="h stands in inputs/h, p/h"):
+        sheet.find("h")

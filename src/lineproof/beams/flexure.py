@@ -94,8 +94,8 @@ def _refuse_overload(steps: Steps, shape: Shape) -> None:
         most += stress * (b - b_w) * h_f * (d - h_f / 2)
     if M_f >= most:
         raise UserError(
-            f"h: the concrete balances at most {most / 1e6:.0f} kN.m, but the factored moment is "
-            f"{M_f / 1e6:.0f} kN.m; write a deeper or wider beam"
+            f"h: the concrete balances at most {most / 1e6:.1f} kN.m, but the factored moment is "
+            f"{M_f / 1e6:.1f} kN.m; write a deeper or wider beam"
         )
 
 

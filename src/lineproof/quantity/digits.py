@@ -116,6 +116,8 @@ def choose_digits(
     result: float,
     unit: str,
     needed: int = 0,
+    decimals: int | None = None,
+    wanted: int = 0,
 ) -> Chosen:
     """Choose the fewest digits so that the printed arguments give the printed result.
 
@@ -124,9 +126,13 @@ def choose_digits(
     most gains a digit, to six at most; only when none is left does the result give one up. A
     result that is nothing but the difference of roundings prints as 0.00; only where even that
     misses, or where the result must show ``needed`` digits, do arguments go beyond six.
+    ``decimals`` asks for a result to so many decimals instead of significant digits; ``wanted`` asks for more digits than the
+    start, as far as they can be had.
     """
-    first = max(start_digits(result, unit), needed)
+    first = max(start_digits(result, unit), needed, min(wanted, MOST_DIGITS))
     fewer = [first] if needed else [*range(first, 0, -1), *range(-MOST_DECIMALS, 1)]
+    if decimals is not None and not needed:
+        fewer = [*range(-decimals, 1)]
     digits = [a.digits for a in args]
     for limit, result_digits in [*((MOST_DIGITS, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
         while not _agrees(function, _printed(args, digits), result, result_digits):

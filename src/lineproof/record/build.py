@@ -26,6 +26,8 @@ from lineproof.record.entry import (
 from lineproof.record.printing import Printer, utilisation
 
 SCHEMA = 1
+PASSES = 3
+"""Passes of printing: the later ones show each value as long as other lines need it."""
 _UNNUMBERED = (FIGURE, NOTE, TABLE)
 
 
@@ -41,8 +43,11 @@ def build(
     not_covered: Iterable[Mapping[str, str]],
 ) -> dict[str, Any]:
     """Return the record of a calculation as plain data, printed strings and digest included."""
+    parts = list(parts)
     builder = _Builder(notation)
-    made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
+    for _ in range(PASSES):
+        builder = _Builder(notation, builder.wanted)
+        made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
     entries = [entry for part in made for entry in part["entries"]]
     confirm = _to_confirm(entries, project)
     return {
@@ -80,10 +85,15 @@ def _scope(scope: str, confirm: list[dict[str, Any]]) -> str:
 
 
 class _Builder:
-    def __init__(self, notation: Notation) -> None:
+    def __init__(self, notation: Notation, wanted: Mapping[int, int] | None = None) -> None:
         self._known = notation
         self._used: dict[str, Symbol] = {}
-        self._printer = Printer()
+        self._printer = Printer(wanted)
+
+    @property
+    def wanted(self) -> Mapping[int, int]:
+        """The digits that lines need of one another, for the next pass."""
+        return self._printer.used
 
     def notation(self) -> list[dict[str, str]]:
         fields = ("id", "base", "sub", "sup", "meaning", "unit")

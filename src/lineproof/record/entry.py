@@ -25,12 +25,11 @@ def digest_of(*pieces: str) -> str:
 class Part:
     """A titled part of a calculation and the entries made in it, by symbol, in order."""
 
-    __slots__ = ("entries", "key", "replaced", "title")
+    __slots__ = ("entries", "key", "title")
 
     def __init__(self, key: str, title: str) -> None:
         self.key, self.title = key, title
         self.entries: dict[str, Entry] = {}
-        self.replaced = False
 
 
 class Entry:

@@ -3,15 +3,16 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import replace
 from decimal import Decimal
 from typing import Any
 
-from lineproof.formula import Criterion, Formula, Name, System, Tree
+from lineproof.formula import Criterion, Formula, Name, Number, System, Tree
 from lineproof.formula.compiled import COMPARE, compile_tree
 from lineproof.quantity.digits import (
     ALL_DIGITS,
+    MOST_DECIMALS,
     MOST_DIGITS,
     PLAIN_BELOW,
     START_DIGITS,
@@ -25,13 +26,15 @@ from lineproof.quantity.digits import (
     start_digits,
 )
 from lineproof.quantity.units import UNITS, factor, internal_factor, system_unit
-from lineproof.record.entry import FOUND, GIVEN, LOOKUP, Entry
+from lineproof.record.entry import FOUND, GIVEN, LINE, LOOKUP, Entry
 
 _NOT_METRIC = frozenset(
     {"in", "ft", "in2", "ft2", "in3", "ft3", "in4", "lbf", "kip", "lbf.ft", "kip.in", "kip.ft",
      "plf", "klf", "psi", "ksi", "psf", "ksf", "pcf", "lb/ft3", "lb", "lb/ft", "min"}
 )  # fmt: skip
 _LONGEST_TYPED = 15
+_RESIDUAL = 0.01
+_NOTHING = 0.001
 
 
 def exact_decimal(entry: Entry) -> Decimal | None:
@@ -55,10 +58,21 @@ def in_unit(value: float, unit: str, digits: int) -> str:
 
 
 class Printer:
-    """Prints entries one after the other, remembering the digits each shows at its own line."""
+    """Prints entries one after the other, remembering the digits each shows at its own line.
 
-    def __init__(self) -> None:
+    A later line may need more digits of a value than its own line shows. ``wanted`` holds what a
+    pass before this one found, by entry, so that a value reads the same wherever it stands;
+    ``used`` holds what this pass finds.
+    """
+
+    def __init__(self, wanted: Mapping[int, int] | None = None) -> None:
         self._digits: dict[int, int] = {}
+        self._wanted = dict(wanted or {})
+        self.used: dict[int, int] = {}
+
+    def _note_use(self, entry: Entry, digits: int) -> None:
+        if entry.kind == LINE:
+            self.used[id(entry)] = max(digits, self.used.get(id(entry), 0))
 
     def printed(self, entry: Entry) -> dict[str, Any]:
         """Return the printed strings of a given, lookup, line or found value."""
@@ -90,8 +104,8 @@ class Printer:
         arguments = [self._argument(a) for a in args]
         trees = (test.left, test.right)
         chosen = [
-            self._side(tree, test, args, arguments, value)
-            for tree, value in zip(trees, sides, strict=True)
+            self._side(tree, test, args, arguments, value, other=other)
+            for tree, value, other in zip(trees, sides, reversed(sides), strict=True)
         ]
         needed = _truthful(test, sides, [c.result for c in chosen], holds=holds)
         chosen = [
@@ -101,6 +115,8 @@ class Printer:
         shown = [max(pair) for pair in zip(*(c.args for c in chosen), strict=True)]
         shown = _true_substitution(test, arguments, shown, holds=holds)
         left, right = (in_unit(v, test.unit, n) for v, n in zip(sides, needed, strict=True))
+        for arg, digits in zip(args, shown, strict=True):
+            self._note_use(arg, digits)
         texts = {
             name: _argument_text(arg, argument, n, test.system)
             for name, arg, argument, n in zip(test.names, args, arguments, shown, strict=True)
@@ -116,20 +132,24 @@ class Printer:
         value: float,
         *,
         needed: int = 0,
+        other: float = 0.0,
     ) -> Chosen:
         if isinstance(tree, Name):
             at = test.names.index(tree.id)
             exact = exact_decimal(args[at])
             own = self._digits.get(id(args[at]), START_DIGITS)
-            digits = needed or (len(exact.as_tuple().digits) if exact is not None else own)
+            digits = needed or (_shown_digits(exact, args[at], test.unit) if exact else own)
             shown = [a.digits for a in arguments]
             shown[at] = max(shown[at], digits)
             return Chosen(tuple(shown), digits)
+        if isinstance(tree, Number) and internal_factor(test.unit) == 1:
+            return Chosen(tuple(a.digits for a in arguments), needed or digits_in(tree.text))
         scale = internal_factor(test.unit)
         compiled = compile_tree(tree, test.names)
         return choose_digits(
             lambda *numbers: compiled(*numbers) / scale,
             arguments, value / scale, test.unit, max(needed, 0),
+            decimals=_residual_decimals(value / scale, other / scale),
         )  # fmt: skip
 
     def _argument(self, entry: Entry) -> Argument:
@@ -144,7 +164,8 @@ class Printer:
         made: Formula = entry.source
         unit, target = entry.unit, system_unit(entry.unit, made.system)
         arguments = [self._argument(a) for a in entry.args]
-        chosen = _choose(made, arguments, entry.value, unit)
+        wanted = self._wanted.get(id(entry), 0)
+        chosen = _choose(made, arguments, entry.value, unit, wanted)
         coherent = chosen.result
         if not _by_powers_of_ten(unit, target):
             # The result in two unlike units: both must follow from the printed arguments.
@@ -158,6 +179,8 @@ class Printer:
                 made.names, entry.args, arguments, chosen.args, strict=True
             )
         }
+        for arg, digits in zip(entry.args, chosen.args, strict=True):
+            self._note_use(arg, digits)
         self._digits[id(entry)] = chosen.result
         return {
             "args": texts,
@@ -181,11 +204,31 @@ class Printer:
         }
 
 
-def _choose(made: Formula, arguments: Sequence[Argument], value: float, unit: str) -> Chosen:
+def _residual_decimals(value: float, other: float) -> int | None:
+    """Return the decimals for a residual: to the first digit of the tolerance beside it.
+
+    A residual is what two nearly equal numbers leave; its own digits are those of their rounding.
+    """
+    if abs(value) >= _RESIDUAL * abs(other):
+        return None
+    return min(max(0, -math.floor(math.log10(abs(other)))), MOST_DECIMALS)
+
+
+def _shown_digits(exact: Decimal, entry: Entry, unit: str) -> int:
+    """Return the digits of an exact value in a unit, zeros before the point included: 140, 30."""
+    text = entry.source.typed.number if entry.unit == unit else ""
+    whole = (exact / factor(unit, UNITS[unit].internal)).adjusted() + 1
+    return max(len(exact.as_tuple().digits), digits_in(text) if text else 1, min(whole, MOST_DIGITS))
+
+
+def _choose(
+    made: Formula, arguments: Sequence[Argument], value: float, unit: str, wanted: int = 0
+) -> Chosen:
     scale = internal_factor(unit)
     return choose_digits(
-        lambda *numbers: made.function(*numbers) / scale, arguments, value / scale, unit
-    )
+        lambda *numbers: made.function(*numbers) / scale,
+        arguments, value / scale, unit, wanted=wanted,
+    )  # fmt: skip
 
 
 def _longer(arguments: Sequence[Argument], chosen: Chosen) -> list[Argument]:
@@ -271,6 +314,8 @@ def _true_substitution(
 
 
 def _ratio(utilisation: float, *, holds: bool) -> str:
+    if 0 < utilisation < _NOTHING and holds:
+        return "0.00"
     for digits in range(START_DIGITS, ALL_DIGITS + 1):
         text = rounded_text(utilisation, digits)
         if (float(text) <= 1) == holds:

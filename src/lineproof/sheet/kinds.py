@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from lineproof.errors import UserError
+from lineproof.formula import Notation
 from lineproof.quantity import UNITS, unit_named
 from lineproof.quantity.units import plain_spelling, units_of_kind
 
@@ -16,6 +17,12 @@ def unit_of_kind(name: str, unit: str, wanted: str) -> str:
             f"write {', '.join(repr(u) for u in units_of_kind(kind)[:6])}"
         )
     return found.spelling
+
+
+def keep_to(notation: Notation, name: str, unit: str) -> None:
+    """Hold to one symbol, one unit: refuse a unit of another kind than the notation gives."""
+    if name in notation:
+        unit_of_kind(name, unit, notation[name].unit)
 
 
 def typed_unit(symbol: str, typed: object) -> str:

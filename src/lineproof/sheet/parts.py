@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping
 from contextlib import contextmanager
-from typing import Any
+from typing import Any, NoReturn
 
 from lineproof.errors import UserError
 from lineproof.record import Entry, Part
@@ -35,7 +35,6 @@ class Parts:
             raise UserError(msg)
         check_key(key)
         part = Part(key, title)
-        before = self._parts.get(key)
         self._parts[key] = part
         self._part, self._scope_of_part = part, {}
         try:
@@ -45,8 +44,6 @@ class Parts:
             raise
         finally:
             self._part = None
-            if before is not None:
-                before.replaced = True
         self._stopped.pop(key, None)
         self._show_part(key)
 
@@ -105,13 +102,13 @@ class Parts:
     def _record(self, entry: Entry) -> Entry:
         part = self._open_part()
         if entry.symbol in part.entries:
-            raise UserError(f"{entry.symbol} stands twice in part {part.key!r}; use another symbol")
+            self._refuse_place(entry.symbol)
         part.entries[entry.symbol] = entry
         if entry.kind in VALUES:
             self._scope_of_part[entry.symbol] = entry
         return entry
 
-    def _refuse_place(self, name: str) -> None:
+    def _refuse_place(self, name: str) -> NoReturn:
         part = self._open_part()
         raise UserError(f"{name} stands twice in part {part.key!r}; use another symbol")
 

@@ -14,20 +14,10 @@ from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
 from lineproof.record import Entry, Part, Procedure, Record
 from lineproof.record.build import build
-from lineproof.record.entry import (
-    CHECK,
-    DECISION,
-    FIGURE,
-    FOUND,
-    GIVEN,
-    LINE,
-    LOOKUP,
-    NOTE,
-    TABLE,
-)
+from lineproof.record.entry import CHECK, DECISION, FIGURE, FOUND, GIVEN, LINE, LOOKUP, NOTE, TABLE
 from lineproof.record.procedures import run
 from lineproof.record.sources import FoundSource, GivenSource, LookupSource, ShownSource
-from lineproof.sheet.kinds import typed_unit, unit_of_kind
+from lineproof.sheet.kinds import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion, own_formula
 from lineproof.sheet.parts import Parts, check_key
@@ -109,7 +99,7 @@ class Sheet(Parts):
         data = self._symbol(symbol, title)
         if unit is not None:
             unit = unit_named(unit).spelling
-            self._check_notation(symbol, unit)
+            keep_to(self.notation, symbol, unit)
         elif symbol in self.notation:
             unit = data.unit
         read = typed
@@ -132,7 +122,7 @@ class Sheet(Parts):
                 f"it has {', '.join(table.columns)}"
             )
         number, unit = numbers[column], unit_named(table.columns[column]).spelling
-        self._check_notation(symbol, unit)
+        keep_to(self.notation, symbol, unit)
         data = self._symbol(symbol, title)
         read = read_quantity(symbol, f"{number} {unit}", unit)
         made = LookupSource(
@@ -172,8 +162,8 @@ class Sheet(Parts):
         if part is None or name in part.entries:
             self._refuse_place(name)
         extra = {"title": title} if title else None
-        made = Entry(part, name, LINE, formula, args, value, extra)  # type: ignore[arg-type]
-        part.entries[name] = self._scope_of_part[name] = made  # type: ignore[union-attr]
+        made = Entry(part, name, LINE, formula, args, value, extra)
+        part.entries[name] = self._scope_of_part[name] = made
         return made
 
     def _general_line(  # noqa: PLR0917 - what `line` was called with, passed on
@@ -198,19 +188,12 @@ class Sheet(Parts):
             raise self._failed(formula, args, error) from None
         if not isinstance(value, float) or value - value != 0.0:
             raise self._failed(formula, args, None)
-        extra: dict[str, Any] = {"title": title} if title else {}
-        if unit is not None:
-            extra["unit"] = unit
+        extra = ({"title": title} if title else {}) | ({} if unit is None else {"unit": unit})
         name = check_id(symbol or formula.symbol)
-        self._check_notation(name, unit or formula.unit)
+        keep_to(self.notation, name, unit or formula.unit)
         return self._record(
             Entry(self._open_part(), name, LINE, formula, args, value, extra or None)
         )
-
-    def _check_notation(self, name: str, unit: str) -> None:
-        """Hold to one symbol, one unit."""
-        if name in self.notation:
-            unit_of_kind(name, unit, self.notation[name].unit)
 
     def _failed(
         self, source: Formula | Criterion, args: tuple[Entry, ...], error: Exception | None
@@ -319,7 +302,7 @@ class Sheet(Parts):
         if not math.isfinite(value):
             raise UserError(f"{symbol}: procedure {procedure.name!r} found no finite number")
         unit = unit_named(unit).spelling
-        self._check_notation(symbol, unit)
+        keep_to(self.notation, symbol, unit)
         if symbol not in closing.names:
             raise UserError(f"{symbol}: its closing criterion {closing.text!r} does not name it")
         source = FoundSource(
