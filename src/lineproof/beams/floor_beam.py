@@ -170,6 +170,8 @@ class FloorBeam:
         if self.inputs.ends == "free":
             record_free_ends(self.sheet)
             return
+        for needed in ("loads/w_f", "section/I_g"):
+            self.sheet.entry(needed)
         given = self.inputs.top_bars
         area, sides = self._spread_area(), 2 if self.inputs.shape == "T" else 1
         if given is not None:

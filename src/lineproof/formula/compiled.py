@@ -17,12 +17,29 @@ _BINARY: dict[str, type[ast.operator]] = {
     "/": ast.Div,
     "**": ast.Pow,
 }
-COMPARE: dict[str, Callable[[Any, Any], bool]] = {
+PLAIN_COMPARE: dict[str, Callable[[Any, Any], bool]] = {
     "<=": operator.le,
     "<": operator.lt,
     ">=": operator.ge,
     ">": operator.gt,
 }
+"""The comparisons as they stand, for printed numbers."""
+
+ROUND_OFF = 1e-12
+"""Relative difference that is nothing but the rounding of floats: 41.3 by two ways is 41.3."""
+
+
+def _equal(left: float, right: float) -> bool:
+    return abs(left - right) <= ROUND_OFF * max(abs(left), abs(right))
+
+
+COMPARE: dict[str, Callable[[float, float], bool]] = {
+    "<=": lambda left, right: left <= right or _equal(left, right),
+    "<": lambda left, right: left < right and not _equal(left, right),
+    ">=": lambda left, right: left >= right or _equal(left, right),
+    ">": lambda left, right: left > right and not _equal(left, right),
+}
+"""The comparisons of computed values: a limit met exactly holds, whatever the last bit says."""
 
 
 def _cbrt(value: float) -> float:

@@ -9,7 +9,7 @@ from decimal import Decimal
 from typing import Any
 
 from lineproof.formula import Criterion, Formula, Name, Number, System, Tree
-from lineproof.formula.compiled import COMPARE, compile_tree
+from lineproof.formula.compiled import COMPARE, PLAIN_COMPARE, compile_tree
 from lineproof.quantity.digits import (
     ALL_DIGITS,
     MOST_DECIMALS,
@@ -288,7 +288,7 @@ def _truthful(
     """
     while True:
         left, right = (in_unit(value, test.unit, n) for value, n in zip(sides, digits, strict=True))
-        if COMPARE[test.sign](Decimal(left), Decimal(right)) == holds or min(digits) >= ALL_DIGITS:
+        if PLAIN_COMPARE[test.sign](Decimal(left), Decimal(right)) == holds or min(digits) >= ALL_DIGITS:
             return digits
         fewest = max(min(digits), 0)
         digits = [max(n, fewest + 1) for n in digits]

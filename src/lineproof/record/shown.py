@@ -7,7 +7,7 @@ from decimal import Decimal
 from typing import Any
 
 from lineproof.formula import parse_criterion
-from lineproof.formula.compiled import COMPARE
+from lineproof.formula.compiled import PLAIN_COMPARE
 from lineproof.quantity import read_quantity
 from lineproof.quantity.units import internal_factor, system_unit
 from lineproof.record.build import record_digest
@@ -80,7 +80,7 @@ def printed_comparison(test: Data, sides: tuple[float, float]) -> Iterator[Findi
         if not rounds_to(text, side / scale):
             yield "print", text, f"{side / scale:.10g}"
     sign = parse_criterion(test["formula"])[1]
-    if COMPARE[sign](Decimal(printed["left"]), Decimal(printed["right"])) != test["holds"]:
+    if PLAIN_COMPARE[sign](Decimal(printed["left"]), Decimal(printed["right"])) != test["holds"]:
         yield "printed comparison", f"{printed['left']} {sign} {printed['right']}", "another truth"
 
 
