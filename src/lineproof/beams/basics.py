@@ -36,7 +36,8 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
             f"Section {inputs.shape}; reinforcement {inputs.grade}; {inputs.density}-density "
             f"concrete; use: {inputs.use}; exposure class {inputs.exposure}; fire-resistance "
             f"rating {inputs.fire_rating}, type {inputs.fire_aggregate} concrete; stirrups "
-            f"{inputs.stirrup}; ends: {inputs.ends}; minimum reinforcement by {inputs.minimum_rule}.",
+            f"{inputs.stirrup}; ends: {inputs.ends}; minimum reinforcement by "
+            f"{inputs.minimum_rule}.",
             title="Choices",
         )
 
@@ -62,7 +63,8 @@ def record_materials(sheet: Sheet, density: str, grade: str, pair: CodePair) -> 
             )
             sheet.note(
                 f"changed-{clause.replace('.', '-')}",
-                f"{pair.concrete} changed clause {clause} ({what}). Its text is not known here: {used}",
+                f"{pair.concrete} changed clause {clause} ({what}). "
+                f"Its text is not known here: {used}",
                 title=f"Clause {clause} of {pair.concrete}",
                 clause=clause,
                 basis=f"from memory of A23.3-14; changed in {pair.concrete}",

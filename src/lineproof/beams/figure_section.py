@@ -148,7 +148,7 @@ def bars(shape: SectionShape, rows: Sequence[BarRow], edge: float) -> list[Circl
 def slab_bars(shape: SectionShape, shown: Shown, row: SlabBars) -> list[Circle]:
     """Draw the top bars spread in the overhangs, evenly over their width as far as it is drawn."""
     y = shape.h - row.depth
-    circles = []
+    circles: list[Circle] = []
     for face, way, stub in ((0.0, -1.0, shown.left), (shape.b_w, 1.0, shown.right)):
         step = min(row.width, stub) / row.count
         places = [face + way * (number + 0.5) * step for number in range(row.count)] if stub else []

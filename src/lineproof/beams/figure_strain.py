@@ -5,14 +5,8 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.figure_section import (
-    BarRow,
-    SectionShape,
-    Shown,
-    bars,
-    choose_scale,
-    outline,
-)
+from lineproof.beams.figure_section import Shown, bars, choose_scale, outline
+from lineproof.beams.section_shape import BarRow, SectionShape
 from lineproof.drawing import (
     LIGHT,
     MEDIUM,
@@ -87,7 +81,8 @@ def strain_stress_figure(
     """Draw section with compression zone, strain diagram and stress block.
 
     ``compression`` holds one force, or more where the block reaches into the web (flange and web
-    apart) or bars act in compression. ``edge`` is cover plus stirrup diameter, for the place of the bars.
+    apart) or bars act in compression. ``edge`` is cover plus stirrup diameter, for the place of
+    the bars.
     """
     shown = choose_scale(shape, SECTION_WIDTH, TALLEST)
     unit = 1.0 / shown.scale

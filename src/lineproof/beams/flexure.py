@@ -38,7 +38,7 @@ def record_balanced(sheet: Sheet, shape: Shape) -> None:
 
 
 def balanced(steps: Steps, shape: Shape) -> bool:
-    """Record the balanced state inside the open part; tell whether the block stays in the flange."""
+    """Record the balanced state inside the open part; tell whether the flange holds the block."""
     steps.lines(stress_block.C_BALANCED, stress_block.A_BALANCED)
     in_flange = shape == "rectangular" or bool(steps.decide(stress_block.BALANCED_IN_FLANGE))
     if in_flange:

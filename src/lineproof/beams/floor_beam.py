@@ -203,7 +203,7 @@ class FloorBeam:
         record_cracks(self.sheet, self.inputs, self._layers())
 
     def summary(self) -> None:
-        """Record the section with its bars, the strains at the resistance and the capacity curve."""
+        """Record the section with its bars, strains at the resistance and the capacity curve."""
         sheet, shape = self.sheet, self.inputs.shape
         layers = self._layers()
         M_r = sheet.entry(f"{FLEXURE}/M_r")

@@ -168,7 +168,7 @@ class InputReader:
 def read_floor_beam(
     given: Mapping[str, Any], project: Mapping[str, Any]
 ) -> tuple[FloorBeamInputs, CodePair]:
-    """Read and check all inputs and the code pair; raises one :class:`UserError` with every fault."""
+    """Read and check all inputs and the code pair; raises :class:`UserError` with every fault."""
     reader = InputReader(given)
     take = reader.take
     pair = reader.code_pair(project)

@@ -62,8 +62,9 @@ def refuse_unfit(sheet: Sheet, layers: BarLayers, name: str, part: str = BARS) -
         if not check:
             least, clear = check.value
             width = sheet.entry("given/b_w").value
+            two = "two layers such as '4-25M / 2-25M', " if part == BARS else ""
             raise UserError(
                 f"{name}: {bars_text(layers)!r}: {layer} do not fit into a web of {width:g} mm "
                 f"(clear distance {clear:.0f} mm, at least {least:.0f} mm); write fewer or larger "
-                "bars, two layers such as '4-25M / 2-25M', or a wider web"
+                f"bars, {two}or a wider web"
             )

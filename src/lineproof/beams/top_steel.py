@@ -44,7 +44,7 @@ def record_top_steel(
     *,
     proof: bool = True,
 ) -> None:
-    """Record top bars, ``web`` within the web and ``overhang`` in each overhang, for the end moment.
+    """Record top bars for the end moment: ``web`` in the web, ``overhang`` in each overhang.
 
     The compression zone is the web: b = b_w, whatever the flange.
     """

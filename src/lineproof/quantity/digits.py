@@ -126,8 +126,8 @@ def choose_digits(
     most gains a digit, to six at most; only when none is left does the result give one up. A
     result that is nothing but the difference of roundings prints as 0.00; only where even that
     misses, or where the result must show ``needed`` digits, do arguments go beyond six.
-    ``decimals`` asks for a result to so many decimals instead of significant digits; ``wanted`` asks for more digits than the
-    start, as far as they can be had.
+    ``decimals`` asks for a result to so many decimals instead of significant digits;
+    ``wanted`` asks for more digits than the start, as far as they can be had.
     """
     first = max(start_digits(result, unit), needed, min(wanted, MOST_DIGITS))
     fewer = [first] if needed else [*range(first, 0, -1), *range(-MOST_DECIMALS, 1)]

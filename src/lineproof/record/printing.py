@@ -218,7 +218,9 @@ def _shown_digits(exact: Decimal, entry: Entry, unit: str) -> int:
     """Return the digits of an exact value in a unit, zeros before the point included: 140, 30."""
     text = entry.source.typed.number if entry.unit == unit else ""
     whole = (exact / factor(unit, UNITS[unit].internal)).adjusted() + 1
-    return max(len(exact.as_tuple().digits), digits_in(text) if text else 1, min(whole, MOST_DIGITS))
+    return max(
+        len(exact.as_tuple().digits), digits_in(text) if text else 1, min(whole, MOST_DIGITS)
+    )
 
 
 def _choose(
@@ -288,7 +290,8 @@ def _truthful(
     """
     while True:
         left, right = (in_unit(value, test.unit, n) for value, n in zip(sides, digits, strict=True))
-        if PLAIN_COMPARE[test.sign](Decimal(left), Decimal(right)) == holds or min(digits) >= ALL_DIGITS:
+        printed = PLAIN_COMPARE[test.sign](Decimal(left), Decimal(right))
+        if printed == holds or min(digits) >= ALL_DIGITS:
             return digits
         fewest = max(min(digits), 0)
         digits = [max(n, fewest + 1) for n in digits]
