@@ -37,6 +37,11 @@ FACTORS: dict[str, dict[str, Fraction]] = {
 }  # fmt: skip
 
 
+def calculate(text: str) -> float:
+    """Evaluate a hand calculation written out in plain numbers in a test."""
+    return float(evaluate(text, {}))
+
+
 def evaluate(text: str, args: Mapping[str, str]) -> Number:
     """Return the value of an expression of printed numbers."""
     return _value(ast.parse(text.strip(), mode="eval").body, args)

@@ -14,8 +14,7 @@ from lineproof.standards.catalogue import NOTATION
 from lineproof.standards.codes import code_pair
 
 from .gallery import EDGE, RECTANGULAR, holds, number, record_of
-from .pocket import faults
-from .test_gallery_beam import calculate
+from .pocket import calculate, faults
 
 PAIR = code_pair("NBC 2015 + A23.3-14")
 THIN = {"b_w": "400 mm", "h_f": "60 mm", "spacing": "0.9 m", "bottom_bars": "4-35M / 4-35M", "ends": "free"}

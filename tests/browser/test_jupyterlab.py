@@ -221,4 +221,4 @@ def test_a_calc_run_and_saved_in_jupyterlab_can_be_exported(
 
 
 def _command(page: Page, name: str) -> None:
-    page.evaluate(f"window.jupyterapp.commands.execute({name!r})")
+    page.evaluate(f"void window.jupyterapp.commands.execute({name!r})")

@@ -85,6 +85,7 @@ class FloorBeam:
         """Record bottom bars, as given or chosen, the effective depth and the cover."""
         for needed in ("loads/M_f", "section/I_g"):
             self.sheet.entry(needed)
+        self._refuse_unfit_compression_bars()
         layers = self.inputs.bottom_bars
         if layers is None:
             layers = choice.first_that_holds(
@@ -93,10 +94,14 @@ class FloorBeam:
         self._record_bars(self.sheet, layers)
         if self.inputs.bottom_bars is not None:
             refuse_unfit(self.sheet, layers, "bottom_bars")
-        if self.inputs.compression_bars is not None:
-            refuse_unfit(
-                self.sheet, self.inputs.compression_bars, "compression_bars", COMPRESSION_BARS
-            )
+
+    def _refuse_unfit_compression_bars(self) -> None:
+        """Refuse them before any bottom bars are chosen: no choice could make them fit."""
+        given = self.inputs.compression_bars
+        if given is not None:
+            trial = Trial(self.sheet)
+            self._record_bars(trial, (BarLayer(2, "15M"),))
+            refuse_unfit(trial, given, "compression_bars", COMPRESSION_BARS)
 
     def _record_bars(self, sheet: Sheet, layers: BarLayers) -> None:
         record_bars(

@@ -58,7 +58,8 @@ class Formula:
 class Criterion:
     """One comparison, for a decision or a check.
 
-    ``yes`` and ``no`` are the concluding sentences; both sides are printed in ``unit``.
+    ``yes`` and ``no`` are the concluding sentences; both sides are printed in ``unit``. A
+    ``proof`` shows the calculation right, not the member sufficient.
     """
 
     text: str
@@ -76,6 +77,7 @@ class Criterion:
     numbers: Mapping[str, str] = field(default_factory=dict, repr=False)
     system: System = "N-mm"
     notation: Notation = field(default=EMPTY, repr=False)
+    proof: bool = False
 
     @cached_property
     def functions(self) -> tuple[Callable[..., float], Callable[..., float]]:
@@ -127,6 +129,7 @@ def criterion(
     numbers: Mapping[str, str] | None = None,
     system: System = "N-mm",
     notation: Notation = EMPTY,
+    proof: bool = False,
 ) -> Criterion:
     """Declare a criterion with its one comparison; ``key`` names it in ids.
 
@@ -141,7 +144,7 @@ def criterion(
         unit = _unit_of_side(left, right, notation)
     return Criterion(
         text, left, sign, right, names, _spelling(unit), clause, title, basis, yes, no,
-        key or _slug(text), dict(numbers or {}), system, notation,
+        key or _slug(text), dict(numbers or {}), system, notation, proof,
     )  # fmt: skip
 
 

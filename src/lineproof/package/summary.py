@@ -20,7 +20,7 @@ _LONGEST_SYMBOL = 24
 
 @dataclass(frozen=True, slots=True)
 class SummaryRow:
-    """A check on the summary page; ``governs`` marks the highest ratio."""
+    """A check on the summary page."""
 
     anchor: str
     label: str
@@ -31,7 +31,6 @@ class SummaryRow:
     ratio: str
     verdict: str
     holds: bool
-    governs: bool
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,12 +78,15 @@ class Confirmation:
 def summary_rows(
     entries: Mapping[str, Mapping[str, Any]], rows: Rows, notation: Notation, prefix: str
 ) -> tuple[SummaryRow, ...]:
-    """Return every check: demand, resistance or limit, ratio, verdict."""
+    """Return every check: demand, resistance or limit, ratio, verdict.
+
+    A proof of the calculation itself (two paths agree) that holds is not a check of the beam.
+    """
     checks = [entry for entry in entries.values() if entry["kind"] == "check"]
-    ratios = [entry.get("utilisation") or 0.0 for entry in checks]
-    highest = max(ratios, default=0.0)
     made = []
-    for entry, ratio in zip(checks, ratios, strict=True):
+    for entry in checks:
+        if entry.get("proof") and entry["holds"]:
+            continue
         printed = rows[entry["id"]]
         demand, resistance = _sides(entry, notation)
         made.append(
@@ -98,7 +100,6 @@ def summary_rows(
                 ratio=printed.ratio,
                 verdict=printed.verdict,
                 holds=printed.holds,
-                governs=highest > 0 and ratio == highest,
             )
         )
     return tuple(made)

@@ -49,7 +49,7 @@ def build(
         builder = _Builder(notation, builder.wanted)
         made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
     entries = [entry for part in made for entry in part["entries"]]
-    confirm = _to_confirm(entries, project)
+    confirm = _to_confirm(entries, project, codes)
     return {
         "schema": SCHEMA,
         "calc": dict(calc),
@@ -187,6 +187,8 @@ class _Builder:
         }
         if entry.kind == CHECK:
             row["utilisation"] = ratio
+            if test.proof:
+                row["proof"] = True
             if not holds and extra.get("exception"):
                 row["exception"] = extra["exception"]
         return row
@@ -241,26 +243,36 @@ def _arguments(names: Iterable[str], args: Iterable[Entry]) -> dict[str, str]:
 
 
 def _to_confirm(
-    entries: Iterable[Mapping[str, Any]], project: Mapping[str, Any]
+    entries: Iterable[Mapping[str, Any]], project: Mapping[str, Any], codes: Mapping[str, str]
 ) -> list[dict[str, Any]]:
-    confirmed = {
-        str(row.get("clause")): f"{row.get('by', '')}, {row.get('on', '')}"
-        for row in project.get("confirmed", ())
-        if isinstance(row, Mapping)
-    }
+    """Return what rests on memory, a row per clause, with the office's confirmation if there is."""
+    confirmed = _confirmed(project, codes)
     rows: dict[tuple[str, str], dict[str, Any]] = {}
     for entry in entries:
         if FROM_MEMORY in str(entry["basis"]):
-            key = (entry["clause"], entry["title"])
+            clause = entry["clause"]
             row = rows.setdefault(
-                key,
+                (clause, entry["basis"]),
                 {
-                    "clause": entry["clause"],
-                    "what": entry["title"],
+                    "clause": clause,
+                    "what": "",
                     "basis": entry["basis"],
-                    "confirmed": confirmed.get(entry["clause"], ""),
+                    "confirmed": confirmed.get(clause, ""),
                     "lines": [],
                 },
             )
+            title = entry["title"][:1].upper() + entry["title"][1:]
+            if title not in row["what"].split("; "):
+                row["what"] = f"{row['what']}; {title}" if row["what"] else title
             row["lines"].append(entry["id"])
     return list(rows.values())
+
+
+def _confirmed(project: Mapping[str, Any], codes: Mapping[str, str]) -> dict[str, str]:
+    """Return who confirmed which clause and when, for the editions of this calculation."""
+    found = {}
+    for row in project.get("confirmed", ()):
+        editions = {codes.get("concrete"), codes.get("building")}
+        if isinstance(row, Mapping) and row.get("edition") in (None, "", *editions):
+            found[str(row.get("clause"))] = f"{row.get('by', '')}, {row.get('on', '')}"
+    return found

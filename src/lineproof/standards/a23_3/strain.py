@@ -309,6 +309,7 @@ PROVED = _criterion(
     yes="Both paths give the same resistance within 0.1 %.",
     no="The two paths DISAGREE by more than 0.1 %: the closed form does not hold here.",
     key="second-path",
+    proof=True,
 )
 
 CRITERIA = (

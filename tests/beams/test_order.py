@@ -1,0 +1,113 @@
+"""Cells in any order and again: the record is that of the straight order, or a refusal that says
+what to run."""
+
+from __future__ import annotations
+
+import pytest
+from hypothesis import HealthCheck, given, settings
+from hypothesis import strategies as st
+
+from lineproof.errors import UserError
+
+from .gallery import CALLS, RECTANGULAR, record_of, run, start
+
+orders = settings(
+    max_examples=25, deadline=None, derandomize=True, database=None,
+    suppress_health_check=list(HealthCheck),
+)  # fmt: skip
+STRAIGHT = record_of()
+
+
+@st.composite
+def call_orders(draw: st.DrawFn) -> list[str]:
+    """Draw all calls in any order, some of them again."""
+    again = draw(st.lists(st.sampled_from(CALLS), max_size=8))
+    return draw(st.permutations([*CALLS, *again]))
+
+
+@orders
+@given(calls=call_orders())
+def test_any_order(calls: list[str]) -> None:
+    """A call too early says which call to run first; closing gives the same lines or refuses."""
+    beam = start()
+    for call in calls:
+        try:
+            getattr(beam, call)()
+        except UserError as error:
+            assert "run beam." in str(error), (call, str(error))
+    try:
+        record = beam.sheet.close()
+    except UserError as error:
+        assert all("run " in fault for fault in error.faults)
+        return
+    assert digests(record.entries) == digests(STRAIGHT.entries)
+
+
+def digests(entries: dict[str, dict[str, object]]) -> dict[str, object]:
+    """Return the digest of every line."""
+    return {i: e["digest"] for i, e in entries.items()}
+
+
+@orders
+@given(calls=call_orders())
+def test_any_order_then_straight(calls: list[str]) -> None:
+    """After the cells have been run in order once more, nothing is left of the disorder."""
+    beam = start()
+    for call in (*calls, *CALLS):
+        try:
+            getattr(beam, call)()
+        except UserError as error:
+            assert "run beam." in str(error), (call, str(error))
+    record = beam.sheet.close()
+    assert digests(record.entries) == digests(STRAIGHT.entries)
+
+
+@orders
+@given(extra=st.lists(st.integers(0, len(CALLS) - 1), max_size=10))
+def test_straight_order_with_repeats(extra: list[int]) -> None:
+    """Cells run again after the straight order change nothing."""
+    beam = start()
+    run(beam, CALLS)
+    run(beam, [CALLS[i] for i in extra])
+    assert beam.sheet.close().digest == STRAIGHT.digest
+
+
+@pytest.mark.parametrize("call", CALLS)
+def test_a_call_alone(call: str) -> None:
+    """Alone after the inputs it works or names what to run; closing names all that is missing."""
+    beam = start()
+    try:
+        getattr(beam, call)()
+    except UserError as error:
+        assert "run beam." in str(error)
+    with pytest.raises(UserError, match=r"has not been run; run beam\.") as caught:
+        beam.sheet.close()
+    assert len(caught.value.faults) >= 3
+
+
+def test_inputs_changed_between_two_runs() -> None:
+    """A changed span makes what rests on it out of date, until its cells are run again."""
+    beam = start()
+    run(beam)
+    again = start(sheet=beam.sheet, span="7 m")
+    with pytest.raises(UserError, match=r"which has changed since; run beam\.loads\(\) again"):
+        again.sheet.close()
+    run(again)
+    assert again.sheet.close().digest == record_of(span="7 m").digest
+
+
+def test_the_same_inputs_again_change_nothing() -> None:
+    """The cell of the inputs run again, nothing else: the record stands."""
+    beam = start()
+    run(beam)
+    start(sheet=beam.sheet)
+    assert beam.sheet.close().digest == STRAIGHT.digest
+
+
+def test_shape_changed_on_the_same_sheet() -> None:
+    """From a tee to a rectangle, all cells run again: the record of a rectangle."""
+    beam = start()
+    run(beam)
+    again = start(sheet=beam.sheet, **RECTANGULAR)
+    run(again)
+    assert digests(again.sheet.close().entries) == digests(record_of(**RECTANGULAR).entries)
