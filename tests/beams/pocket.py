@@ -20,7 +20,7 @@ _OPERATORS: dict[type, Callable[[Any, Any], Any]] = {
     ast.Gt: operator.gt,
 }  # fmt: skip
 _FUNCTIONS: dict[str, Callable[..., Number]] = {
-    "sqrt": lambda x: math.sqrt(x), "max": max, "min": min, "abs": abs,
+    "sqrt": math.sqrt, "max": max, "min": min, "abs": abs,
 }  # fmt: skip
 
 # One printed unit in units of the system that the arguments are printed in.
@@ -81,7 +81,7 @@ def last_digit(printed: str) -> float:
     mantissa, _, power = printed.lower().partition("e")
     digits = mantissa.lstrip("-")
     decimals = len(digits.partition(".")[2])
-    unit = 10.0 ** -decimals
+    unit = 10.0**-decimals
     if not decimals:
         zeros = len(digits) - len(digits.rstrip("0"))
         unit = 10.0 ** max(0, min(zeros, len(digits) - 3))
@@ -109,7 +109,8 @@ def _line(entry: Mapping[str, Any]) -> Iterator[str]:
     for result, unit in results:
         value = float(found / FACTORS[entry["system"]][unit])
         if abs(value - float(result)) > last_digit(result) * (1 + 1e-9):
-            yield f"{entry['id']}: {entry['formula']} with {printed['args']} gives {value}, not {result} {unit}"
+            line = f"{entry['id']}: {entry['formula']} with {printed['args']}"
+            yield f"{line} gives {value}, not {result} {unit}"
 
 
 def _comparison(place: str, test: Mapping[str, Any], system: str) -> Iterator[str]:
@@ -122,7 +123,10 @@ def _comparison(place: str, test: Mapping[str, Any], system: str) -> Iterator[st
     for value, key in ((left, "left"), (right, "right")):
         # A difference near zero keeps no digits: abs(...) may print 0 for 1e-9.
         room = last_digit(printed[key]) * (1 + 1e-9)
-        if "abs(" not in test["formula"] and abs(float(value / factor) - float(printed[key])) > room:
+        if (
+            "abs(" not in test["formula"]
+            and abs(float(value / factor) - float(printed[key])) > room
+        ):
             yield f"{place}: {key} side gives {float(value / factor)}, not {printed[key]}"
     if test.get("utilisation") is not None:
         ratio = (float(printed["utilisation"]) <= 1) == test["holds"]

@@ -17,14 +17,19 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
         {"span": "7.6 kN"},
         "span: '7.6 kN' is a force, but a length is needed; write it in ",
     ),
-    "negative": ({"span": "-7 m"}, "span: '-7 m' is negative; write a positive value such as '10 m'"),
+    "negative": (
+        {"span": "-7 m"},
+        "span: '-7 m' is negative; write a positive value such as '10 m'",
+    ),
     "zero": ({"h": "0 mm"}, "h: '0 mm' is zero; write a positive value such as '750 mm'"),
     "not a number": (
         {"spacing": float("nan")},
         "spacing: 'nan' is not a number with a unit; write for example '25 m'",
     ),
-    "decimal comma": ({"span": "7,6 m"}, "span: '7,6 m' is not a number with a unit; "
-                      "write a decimal point: '7.6 m'"),
+    "decimal comma": (
+        {"span": "7,6 m"},
+        ("span: '7,6 m' is not a number with a unit; write a decimal point: '7.6 m'"),
+    ),
     "too strong": (
         {"f_c": "90 MPa"},
         "f_c: '90 MPa' is outside 20 to 80 MPa (A23.3, 8.6.1.1); write a value inside it",
@@ -43,13 +48,19 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "unknown bar": (
         {"bottom_bars": "4-22M"},
-        "bottom_bars: '22M' is not a Canadian bar; did you mean '25M'? There are 10M, 15M, 20M, "
-        "25M, 30M, 35M, 45M, 55M",
+        (
+            "bottom_bars: '22M' is not a Canadian bar; did you mean '25M'? There are 10M, 15M, "
+            "20M, "
+            "25M, 30M, 35M, 45M, 55M"
+        ),
     ),
     "bars not understood": (
         {"bottom_bars": "4x25M"},
-        "bottom_bars: '4x25M' is not understood; write '4-25M', or '4-25M / 2-25M' for two layers "
-        "from the bottom up",
+        (
+            "bottom_bars: '4x25M' is not understood; write '4-25M', or '4-25M / 2-25M' for two "
+            "layers "
+            "from the bottom up"
+        ),
     ),
     "three layers": (
         {"bottom_bars": "4-25M / 4-25M / 2-25M"},
@@ -61,8 +72,11 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "not in line": (
         {"bottom_bars": "2-25M / 4-25M"},
-        "bottom_bars: '2-25M / 4-25M' has more bars in the second layer than in the first, so they "
-        "cannot stand in line; write for example '2-25M / 2-25M'",
+        (
+            "bottom_bars: '2-25M / 4-25M' has more bars in the second layer than in the first, "
+            "so they "
+            "cannot stand in line; write for example '2-25M / 2-25M'"
+        ),
     ),
     "compression bars in two layers": (
         {"compression_bars": "2-20M / 2-20M"},
@@ -79,30 +93,45 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     "bars that do not fit": (
         {"bottom_bars": "7-25M"},
         # (380 - 127.6)/6 - 25.2 = 16.9; 1.4 x 25.2 = 35.3
-        "bottom_bars: '7-25M': 7-25M do not fit into a web of 380 mm (clear distance 17 mm, at "
-        "least 35 mm); write fewer or larger bars, two layers such as '4-25M / 2-25M', or a wider "
-        "web",
+        (
+            "bottom_bars: '7-25M': 7-25M do not fit into a web of 380 mm (clear distance 17 mm, at "
+            "least 35 mm); write fewer or larger bars, two layers such as '4-25M / 2-25M', or a "
+            "wider "
+            "web"
+        ),
     ),
     "top bars that do not fit": (
         {"top_bars": "9-25M"},
         # 252.4/8 - 25.2 = 6.35
-        "top_bars: '9-25M': 9-25M do not fit into a web of 380 mm (clear distance 6 mm, at least "
-        "35 mm); write fewer or larger bars, or a wider web",
+        (
+            "top_bars: '9-25M': 9-25M do not fit into a web of 380 mm (clear distance 6 mm, at "
+            "least "
+            "35 mm); write fewer or larger bars, or a wider web"
+        ),
     ),
     "compression bars that do not fit": (
         {**RECTANGULAR, "compression_bars": "9-25M"},
-        "compression_bars: '9-25M': 9-25M do not fit into a web of 380 mm (clear distance 6 mm, at "
-        "least 35 mm); write fewer or larger bars, or a wider web",
+        (
+            "compression_bars: '9-25M': 9-25M do not fit into a web of 380 mm (clear distance 6 "
+            "mm, at "
+            "least 35 mm); write fewer or larger bars, or a wider web"
+        ),
     ),
     "grade": (
         {"grade": "600R"},
-        "grade: '600R' is not a grade of reinforcement; did you mean '500R'? There are 400R, 400W, "
-        "500R, 500W",
+        (
+            "grade: '600R' is not a grade of reinforcement; did you mean '500R'? There are "
+            "400R, 400W, "
+            "500R, 500W"
+        ),
     ),
     "rating between the rows": (
         {"fire_rating": "2.5 h"},
-        "fire_rating: '2.5 h' is not in the table; write one of 0.5 h, 0.75 h, 1 h, 1.5 h, 2 h, "
-        "3 h, 4 h",
+        (
+            "fire_rating: '2.5 h' is not in the table; write one of 0.5 h, 0.75 h, 1 h, 1.5 h, "
+            "2 h, "
+            "3 h, 4 h"
+        ),
     ),
     "exposure": (
         {"exposure": "C-2"},
@@ -110,13 +139,18 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "web opening": (
         {"web_openings": "1 at midspan"},
-        "web_openings: '1 at midspan': a beam with web openings is outside the method; write "
-        "'none' and design the opening region by strut-and-tie",
+        (
+            "web_openings: '1 at midspan': a beam with web openings is outside the method; write "
+            "'none' and design the opening region by strut-and-tie"
+        ),
     ),
     "deep beam": (
         {"span": "1.1 m", "spacing": "2 m"},
-        "span: '1.1 m' is less than twice h of '620 mm': a deep beam is outside the method; use "
-        "strut-and-tie (A23.3, 10.7)",
+        (
+            "span: '1.1 m' is less than twice h of '620 mm': a deep beam is outside the method; "
+            "use "
+            "strut-and-tie (A23.3, 10.7)"
+        ),
     ),
     "no slab": ({"h_f": None}, "h_f: a beam of shape 'T' needs its slab; write '140 mm'"),
     "rectangle with a slab": (
@@ -129,13 +163,18 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "spacing within the web": (
         {"spacing": "0.35 m"},
-        "spacing: '0.35 m' is not more than b_w of '380 mm'; write the distance between the "
-        "centres of the beams",
+        (
+            "spacing: '0.35 m' is not more than b_w of '380 mm'; write the distance between the "
+            "centres of the beams"
+        ),
     ),
     "shape": ({"shape": "I"}, "shape: 'I' is not known; write one of 'T', 'L', 'rectangular'"),
     "ends": (
         {"ends": "fixed"},
-        "ends: 'fixed' is not known; write one of 'free', 'cast with a girder', 'cast with a column'",
+        (
+            "ends: 'fixed' is not known; write one of 'free', 'cast with a girder', 'cast with a "
+            "column'"
+        ),
     ),
     "rule": (
         {"minimum_rule": "10.5.1"},
@@ -149,8 +188,10 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
         # w_f = 1.25 x (5.6544 + 40 x 3.1) + 1.5 x 14.88 = 184.4; x 7.22 = 1331.3 kN.m;
         # 16.6816 x 380 x 566.1**2/2 = 1015.7 kN.m
         {**RECTANGULAR, "superimposed": "40 kPa", "bottom_bars": "4-25M"},
-        "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1331.3 kN.m; "
-        "write a deeper or wider beam",
+        (
+            "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1331.3 kN.m; "
+            "write a deeper or wider beam"
+        ),
     ),
 }
 
@@ -186,13 +227,15 @@ def test_all_faults_at_once() -> None:
 
 @pytest.mark.parametrize("name", ["span", "spacing", "b_w", "h", "h_f", "f_c", "gamma_c", "cover",
                                   "aggregate", "superimposed", "fire_rating"])  # fmt: skip
-@pytest.mark.parametrize("given", [None, "", "nan mm", "1e400 mm", "12 parsecs", True, [1], "--3 mm"])
+@pytest.mark.parametrize(
+    "given", [None, "", "nan mm", "1e400 mm", "12 parsecs", True, [1], "--3 mm"]
+)
 def test_odd_quantities(name: str, given: object) -> None:
     """Whatever stands for a quantity: an error that names the input."""
     if name == "h_f" and given is None:
         given = "none"
     with pytest.raises(UserError) as caught:
-        start(**{name: given})
+        start(**dict[str, Any]({name: given}))
     assert caught.value.faults[0].startswith(f"{name}: ")
 
 
@@ -205,6 +248,8 @@ def test_the_project_names_its_codes() -> None:
 
 def test_compression_bars_below_the_axis() -> None:
     """A wide flange needs 13 mm; bars 51 mm down are not in compression, and the error says so."""
-    with pytest.raises(UserError, match="compression_bars: they lie below the neutral axis") as caught:
+    with pytest.raises(
+        UserError, match="compression_bars: they lie below the neutral axis"
+    ) as caught:
         record_of(bottom_bars="4-25M", compression_bars="2-20M")
     assert "leave them out: compression_bars = None" in str(caught.value)

@@ -1,4 +1,4 @@
-"""Branches of a beam: take-down by shape, web block, compression bars, layers, skin, ends, rules."""
+"""Branches of a beam: take-down, web block, compression bars, layers, skin, ends, rules."""
 
 from __future__ import annotations
 
@@ -17,7 +17,13 @@ from .gallery import EDGE, RECTANGULAR, holds, number, record_of
 from .pocket import calculate, faults
 
 PAIR = code_pair("NBC 2015 + A23.3-14")
-THIN = {"b_w": "400 mm", "h_f": "60 mm", "spacing": "0.9 m", "bottom_bars": "4-35M / 4-35M", "ends": "free"}
+THIN = {
+    "b_w": "400 mm",
+    "h_f": "60 mm",
+    "spacing": "0.9 m",
+    "bottom_bars": "4-35M / 4-35M",
+    "ends": "free",
+}
 DEEP = {"h": "900 mm", "span": "12 m"}
 DOUBLY: dict[str, Any] = {
     **RECTANGULAR, "superimposed": "8 kPa", "bottom_bars": "4-25M / 4-25M",
@@ -292,7 +298,9 @@ def test_top_steel_for_the_restraint_that_exists(ends: str, moment: float) -> No
     args = record.entries["top-steel/a"]["args"]
     assert args["b"] == "given/b_w"
     assert record.failed == []
-    top = {i for i, e in record.entries.items() if i.startswith("top-steel") and e["kind"] == "check"}
+    top = {
+        i for i, e in record.entries.items() if i.startswith("top-steel") and e["kind"] == "check"
+    }
     assert top == {
         f"top-steel/{key}"
         for key in ("bars-fit", "steel-for-moment", "yield", "strength", "second-path",

@@ -60,7 +60,9 @@ def test_confirmed_value_is_used() -> None:
         assert record.entries[f"{part}/yield"]["right"] == 0.5
     rows = rows_to_confirm(record, "10.5.2")
     assert {row["confirmed"] for row in rows} == {"A.B., 2026-11-20"}
-    assert "the value that the office confirmed" in record.entries["materials/changed-10-5-2"]["text"]
+    assert (
+        "the value that the office confirmed" in record.entries["materials/changed-10-5-2"]["text"]
+    )
 
 
 def test_confirmed_value_rules_the_bars() -> None:
@@ -97,7 +99,9 @@ def test_a_value_that_is_no_ratio_is_refused(value: object) -> None:
 @pytest.mark.parametrize("pair", ["NBC 2015 + A23.3:19", "NBC 2020 + A23.3-14", "NBC 2020", ""])
 def test_mixes_are_refused(pair: str) -> None:
     """The pairs are locked."""
-    with pytest.raises(UserError, match=r"^codes\.pair: .* is not a locked code pair; write one of"):
+    with pytest.raises(
+        UserError, match=r"^codes\.pair: .* is not a locked code pair; write one of"
+    ):
         start(project={"codes": {"pair": pair}})
 
 

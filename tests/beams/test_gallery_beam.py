@@ -70,13 +70,14 @@ HAND = {
     "balanced/M_rb": "16.6816*(380800*496.1 + 380*320.6185*(566.1 - 160.30925))/1e6"
     " = 16.6816*(188914880 + 49439140)/1e6 = 3976.1",
     "capacity/r_b": "2000/24661.05 = 0.08110",
-    # minimum: web in tension
+    # the web is in tension
     "minimum-steel/A_smin": "0.2*sqrt(32)*380*620/400 = 1.131371*589 = 666.4",
-    # top: a 24th of the moment; 2-15M in the web and 2-15M in each overhang
+    # at the top a 24th of the moment: 2-15M in the web and 2-15M in each overhang
     "top-steel/M_f": "47.787*7.6**2/24 = 115.007",
     "top-steel/d": "620 - 30 - 11.3 - 8 = 570.7",
     "top-steel/A_s": "(2 + 2*2)*200 = 1200",
-    "top-steel/a_r": "570.7 - sqrt(570.7**2 - 2*115007380/(16.6816*380)) = 570.7 - 537.9711 = 32.73",
+    "top-steel/a_r": "570.7 - sqrt(570.7**2 - 2*115007380/(16.6816*380))"
+    " = 570.7 - 537.9711 = 32.73",
     "top-steel/A_sr": "16.6816*380*32.7289/340 = 610.2",
     "top-steel/a": "0.85*1200*400/(16.6816*380) = 408000/6339.008 = 64.363",
     "top-steel/M_r": "408000*(570.7 - 64.3634/2)/1e6 = 219.72",
@@ -167,9 +168,7 @@ def test_minimum_with_the_flange_in_tension_by_cracking() -> None:
 
     Hand, d 570.7: a = 570.7 - sqrt(570.7**2 - 2 x 416.8e6/6339) = 130.0, 6339 x 130.0/340 = 2424.
     """
-    record = record_of(
-        ends="cast with a column", top_bars="2-15M", minimum_rule="10.5.1.1"
-    )
+    record = record_of(ends="cast with a column", top_bars="2-15M", minimum_rule="10.5.1.1")
     check = record.entries["top-steel/minimum-by-cracking"]
     assert check["left"] == pytest.approx(416.8, abs=0.06)
     assert check["right"] == pytest.approx(219.7, abs=0.06)

@@ -36,9 +36,14 @@ def test_exposure(exposure: str, cover: int, f_c: int, kind: str) -> None:
 
 @pytest.mark.parametrize(
     ("rating", "cover", "slab", "width"),
-    [("1 h", 20, 90, "100 <= b_w"), ("45 min", 20, 77, "100 <= b_w"), ("2 h", 25, 130, "100 <= b_w"),
-     ("3 h", 39, 158, "140 <= b_w"), ("4 h", 50, 180, "165 <= b_w")],
-)  # fmt: skip
+    [
+        ("45 min", 20, 77, "100 <= b_w"),
+        ("1 h", 20, 90, "100 <= b_w"),
+        ("2 h", 25, 130, "100 <= b_w"),
+        ("3 h", 39, 158, "140 <= b_w"),
+        ("4 h", 50, 180, "165 <= b_w"),
+    ],
+)
 def test_fire(rating: str, cover: float, slab: float, width: str) -> None:
     """NBC Appendix D, D-2.9: cover 41.3 and slab 140 of the gallery beam against the tables."""
     record = record_of(fire_rating=rating, bottom_bars="4-25M", ends="free")

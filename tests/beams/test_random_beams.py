@@ -184,7 +184,9 @@ def test_closed_forms_of_bare_sections(
     steel, stress = strain.Steel(200000, f_y, 0.85), x["alpha_1"] * 0.65 * f_c
     strips = strain.block_strips(strain.Section(width, b_w, h_f), stress, x["beta_1"])
     axis = strain.neutral_axis(strips, layers, steel, 0.0035, stress)
-    assert strain.moment(strips, layers, steel, 0.0035, axis, stress) == pytest.approx(M_r, rel=1e-3)
+    assert strain.moment(strips, layers, steel, 0.0035, axis, stress) == pytest.approx(
+        M_r, rel=1e-3
+    )
     assert axis == pytest.approx(c, rel=1e-6)
 
 

@@ -88,7 +88,22 @@ def test_a_check_that_fails_is_issued_and_said(
     assert "B1: check flexure/moment (Moment resistance) does not hold" in capsys.readouterr().out
 
 
-def test_two_calcs_make_one_package(unrun: Notebook, tmp_path: Path) -> None:
+def test_an_exception_the_engineer_accepted_is_said_with_his_initials(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    unrun["cells"][2]["source"] = 'M_f = "500 kN.m"\nA_s = "2500 mm2"'
+    unrun["cells"][5]["source"] = unrun["cells"][5]["source"].replace(
+        'key="moment"',
+        'key="moment", accepted="shored until the topping is placed", initials="A.B."',
+    )
+    assert main(["issue", str(save(unrun, tmp_path / "beam.ipynb"))]) == 1
+    said = capsys.readouterr().out
+    assert "check flexure/moment (Moment resistance) does not hold, accepted by A.B." in said
+
+
+def test_two_calcs_make_one_package(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
     first = save(unrun, tmp_path / "one.ipynb")
     unrun["cells"][3]["source"] = unrun["cells"][3]["source"].replace('"B1"', '"B2"')
     second = save(unrun, tmp_path / "two.ipynb")
@@ -96,6 +111,11 @@ def test_two_calcs_make_one_package(unrun: Notebook, tmp_path: Path) -> None:
     assert files_in(tmp_path / "out") == ["one.json", "package.html", "package.pdf", "two.json"]
     records = records_in_pdf((tmp_path / "out" / "package.pdf").read_bytes())
     assert [record["calc"]["id"] for record in records] == ["B1", "B2"]
+    capsys.readouterr()
+    assert main(["lines", str(tmp_path / "out" / "package.pdf"), "--json"]) == 0
+    data = json.loads(capsys.readouterr().out)
+    assert data["calc"] == "B1, B2"
+    assert [line["calc"] for line in data["lines"]] == ["B1"] * 12 + ["B2"] * 12
 
 
 def refused(arguments: list[str], capsys: pytest.CaptureFixture[str]) -> str:
@@ -216,7 +236,7 @@ def test_a_file_in_place_of_the_folder(beam_file: Path, capsys: pytest.CaptureFi
     place.write_text("mine")
     for into in (place, place / "below"):
         said = refused(["issue", str(beam_file), "--into", str(into)], capsys)
-        assert "taken" in said
+        assert said == f"{place}: is a file, not a folder; choose another with --into\n"
     assert place.read_text() == "mine"
     assert files_in(beam_file.parent) == ["beam.ipynb", "taken"]
 

@@ -47,7 +47,7 @@ def test_values_to_confirm_name_their_lines(whole_record: Record) -> None:
     items = build_package([whole_record]).calcs[0].confirm
     confirmed = {item.what: item.confirmed for item in items if item.confirmed}
 
-    assert confirmed == {"resistance factor for steel": "A.V., 2026-11-18"}
+    assert confirmed == {"Resistance factor for steel": "A.V., 2026-11-18"}
     assert all(anchor and label for item in items for anchor, label in item.lines)
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 from collections.abc import Callable
 from dataclasses import dataclass
 
@@ -80,7 +81,7 @@ def moments_of_area(outline: Polygon) -> tuple[float, float, float]:
     """Return area, height of the centroid and inertia about it (Green's theorem on the corners)."""
     inertia = 0.0
     corners = list(outline.exterior.coords)
-    for (x1, y1), (x2, y2) in zip(corners, corners[1:], strict=False):
+    for (x1, y1), (x2, y2) in itertools.pairwise(corners):
         inertia += (x1 * y2 - x2 * y1) * (y1 * y1 + y1 * y2 + y2 * y2) / 12
     area, y = outline.area, outline.centroid.y
     return area, y, abs(inertia) - area * y * y
@@ -153,7 +154,8 @@ def test_neutral_axis_of_the_block(
     def unbalanced(c: float) -> float:
         cut = box(-1e4, section.h - section.beta_1 * c, 1e4, section.h)
         concrete = section.stress * section.outline.intersection(cut).area
-        return concrete - sum(bar_force(d, A, f_y, c) for d, A in zip(depths, areas, strict=True))
+        bars = [bar_force(d, A, f_y, c) for d, A in zip(depths, areas, strict=True)]
+        return float(concrete) - sum(bars)
 
     expected = root(unbalanced, 2 * section.h)
     layers = [strain.Layer(d, A) for d, A in zip(depths, areas, strict=True)]
@@ -182,7 +184,7 @@ def test_neutral_axis_of_the_parabola(section: Concrete, area: float) -> None:
 
     def concrete(c: float) -> float:
         corners = sorted({0.0, min(section.h_f, c), c * (1 - 0.002 / EPS_CU), c})
-        pieces = zip(corners, corners[1:], strict=False)
+        pieces = itertools.pairwise(corners)
         return sum(float(quad(stress, low, high, args=(c,))[0]) for low, high in pieces)
 
     expected = root(lambda c: concrete(c) - bar_force(d, area, 400.0, c), 1.2 * section.h)

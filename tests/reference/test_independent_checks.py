@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import pytest
 
+from lineproof.formula import Formula
 from lineproof.standards.a23_3 import (
     compression_steel,
     crack_control,
@@ -22,7 +23,7 @@ from lineproof.standards.nbc.combinations import CASES, factored
 
 from .calculator import value
 
-FACTORS = {"phi_c": 0.65, "phi_s": 0.85, "f_c": 35, "f_y": 400, "alpha_1": 0.7975,
+FACTORS: dict[str, float] = {"phi_c": 0.65, "phi_s": 0.85, "f_c": 35, "f_y": 400, "alpha_1": 0.7975,
            "beta_1": 0.8825, "eps_cu": 0.0035, "E_s": 200000}  # fmt: skip
 STEEL = strain.Steel(200000, 400, 0.85)
 BLOCK = 0.7975 * 0.65 * 35
@@ -30,7 +31,7 @@ BLOCK = 0.7975 * 0.65 * 35
 
 def test_no_1_materials() -> None:
     """E_c by 8.6.2.2 and 8.6.2.3, f_r, alpha_1, beta_1: 27 289, 26 622, 3.550, 0.7975, 0.8825."""
-    x = {"f_c": 35, "gamma_c": 2350, "lambda_": 1}
+    x: dict[str, float] = {"f_c": 35, "gamma_c": 2350, "lambda_": 1}
     assert value(materials.E_C_GENERAL, x) == pytest.approx(27289, abs=0.5)
     assert value(materials.E_C_NORMAL, x) == pytest.approx(26622, abs=0.5)
     assert value(materials.F_R, x) == pytest.approx(3.550, abs=0.0005)
@@ -74,7 +75,7 @@ def test_no_2_factors_of_the_table() -> None:
 
 def test_no_4_flange_widths() -> None:
     """Span 9000, h_f 130, clear 2600: T continuous 2150, T simple 2950, L 1100 mm."""
-    x = {"l": 9000, "h_f": 130, "l_w": 2600, "b_w": 350}
+    x: dict[str, float] = {"l": 9000, "h_f": 130, "l_w": 2600, "b_w": 350}
     for overhang, width, expected in (
         (flange.OVERHANG_T_CONTINUOUS, flange.WIDTH_T, 2150),
         (flange.OVERHANG_T_SIMPLE, flange.WIDTH_T, 2950),
@@ -86,7 +87,7 @@ def test_no_4_flange_widths() -> None:
 
 def test_no_5a_rectangular() -> None:
     """a 107.1, c 121.3, c/d 0.227, M_r 327.4 kN.m; rho_b 0.02997; both paths."""
-    x = FACTORS | {"b": 350, "d": 535, "A_s": 2000}
+    x: dict[str, float] = FACTORS | {"b": 350, "d": 535, "A_s": 2000}
     x["a"] = value(flexure.BLOCK_RECTANGULAR, x)
     assert x["a"] == pytest.approx(107.1, abs=0.05)
     x["c"] = value(flexure.NEUTRAL_AXIS, x)
@@ -94,9 +95,8 @@ def test_no_5a_rectangular() -> None:
     assert x["c"] / x["d"] == pytest.approx(0.227, abs=0.0005)
     M_r = value(flexure.M_R_RECTANGULAR, x)
     assert M_r / 1e6 == pytest.approx(327.4, abs=0.05)
-    assert _by_layers(strain.Section(350, 350, 600), [strain.Layer(535, 2000)]) == (
-        pytest.approx(x["c"], rel=1e-6), pytest.approx(M_r, rel=1e-5),
-    )  # fmt: skip
+    by_layers = _by_layers(strain.Section(350, 350, 600), [strain.Layer(535, 2000)])
+    assert by_layers == pytest.approx((x["c"], M_r), rel=1e-5)
     x["c_b"] = value(stress_block.C_BALANCED, x)
     x["a_b"] = value(stress_block.A_BALANCED, x)
     x["C_b"] = value(stress_block.C_BALANCED_RECTANGULAR, x)
@@ -106,7 +106,7 @@ def test_no_5a_rectangular() -> None:
 
 def test_no_5b_tee() -> None:
     """b 900, h_f 100, b_w 300, d 600, A_s 7000: C_f 1088.6, a 237.3, c/d 0.448, M_r 1220.4."""
-    x = FACTORS | {"b": 900, "b_w": 300, "h_f": 100, "d": 600, "A_s": 7000}
+    x: dict[str, float] = FACTORS | {"b": 900, "b_w": 300, "h_f": 100, "d": 600, "A_s": 7000}
     assert value(flexure.BLOCK_RECTANGULAR, x) > 100  # leaves the flange
     x["C_f"] = value(flexure.FLANGE_FORCE, x)
     assert x["C_f"] / 1e3 == pytest.approx(1088.6, abs=0.05)
@@ -116,9 +116,8 @@ def test_no_5b_tee() -> None:
     assert c / 600 == pytest.approx(0.448, abs=0.0005)
     M_r = value(flexure.M_R_TEE, x)
     assert M_r / 1e6 == pytest.approx(1220.4, abs=0.05)
-    assert _by_layers(strain.Section(900, 300, 100), [strain.Layer(600, 7000)]) == (
-        pytest.approx(c, rel=1e-6), pytest.approx(M_r, rel=1e-5),
-    )  # fmt: skip
+    by_layers = _by_layers(strain.Section(900, 300, 100), [strain.Layer(600, 7000)])
+    assert by_layers == pytest.approx((c, M_r), rel=1e-5)
 
 
 @pytest.mark.parametrize(
@@ -128,15 +127,17 @@ def test_no_5b_tee() -> None:
         (0.0, compression_steel.FORCE_GROSS, 142.4, 395.2, 446.2),
     ],
 )
-def test_no_5c_doubly(displaced: float, force: object, c: float, f_sp: float, M_r: float) -> None:
+def test_no_5c_doubly(displaced: float, force: Formula, c: float, f_sp: float, M_r: float) -> None:
     """b 300, d 500, d' 62, A_s 3000, A'_s 1000: displaced concrete counted, and not."""
-    x = FACTORS | {"b": 300, "d": 500, "d_p": 62, "A_s": 3000, "A_sp": 1000}
-    section, layers = strain.Section(300, 300, 600), [strain.Layer(500, 3000), strain.Layer(62, 1000)]
+    x: dict[str, float] = FACTORS | {"b": 300, "d": 500, "d_p": 62, "A_s": 3000, "A_sp": 1000}
+    section, layers = (
+        strain.Section(300, 300, 600),
+        [strain.Layer(500, 3000), strain.Layer(62, 1000)],
+    )
     x["c"], by_layers = _by_layers(section, layers, displaced)
     assert x["c"] == pytest.approx(c, abs=0.05)
     x["f_sp"] = value(compression_steel.STRESS, x)
     assert x["f_sp"] == pytest.approx(f_sp, abs=0.05)
-    assert isinstance(force, type(compression_steel.FORCE))
     x["C_s"] = value(force, x)
     x["a"] = value(compression_steel.BLOCK, x)
     x["C_c"] = value(compression_steel.CONCRETE_FORCE, x)
@@ -148,7 +149,7 @@ def test_no_5c_doubly(displaced: float, force: object, c: float, f_sp: float, M_
 
 def test_no_6_minimum_steel() -> None:
     """A_s,min 621, flange in tension 1553 (b_t 875) and 932 (525); 1.2 M_cr 89.5 kN.m."""
-    x = {"f_c": 35, "f_y": 400, "h": 600, "b_w": 350, "lambda_": 1}
+    x: dict[str, float] = {"f_c": 35, "f_y": 400, "h": 600, "b_w": 350, "lambda_": 1}
     for width, b_f, b_t, area in (
         (minimum.WIDTH_WEB, 350, 350, 621),
         (minimum.WIDTH_FLANGE_T, 2950, 875, 1553),
@@ -165,31 +166,49 @@ def test_no_6_minimum_steel() -> None:
 
 def test_no_7_crack_control() -> None:
     """d_c = 40 + 11.3 + 12.6 = 63.9, A = 2 x 63.9 x 350/4 = 11 183, f_s 240: z = 21 456 N/mm."""
-    x = {"c_c": 40, "d_bs": 11.3, "d_b": 25.2, "h": 600, "d": 536.1, "b_w": 350, "A_s": 2000}
+    x: dict[str, float] = {
+        "c_c": 40,
+        "d_bs": 11.3,
+        "d_b": 25.2,
+        "h": 600,
+        "d": 536.1,
+        "b_w": 350,
+        "A_s": 2000,
+    }
     x |= {"A_b": 500, "f_y": 400}
     x["f_s"] = value(crack_control.STRESS_ALLOWANCE, x)
     x["d_c"] = value(crack_control.D_C, x)
     x["d_s"] = value(crack_control.D_S, x)
     x["n_z"] = value(crack_control.BAR_COUNT, x)
     x["A_e"] = value(crack_control.TENSION_AREA, x)
-    assert (x["d_c"], x["A_e"]) == (pytest.approx(63.9), pytest.approx(11183, abs=1))
+    assert x["d_c"] == pytest.approx(63.9)
+    assert x["A_e"] == pytest.approx(11183, abs=1)
     assert value(crack_control.Z, x) == pytest.approx(21456, abs=1)
 
 
 def test_no_14_skin_steel() -> None:
     """h 900, d 815, side cover 40 + 10M + 15M: strips 280 x 118.6 per side, 531 mm2 in all."""
-    x = {"h": 900, "d": 815, "c_c": 40, "d_bs": 11.3, "d_b": 16, "b_w": 350, "rho_sk": 0.008}
+    x: dict[str, float] = {
+        "h": 900,
+        "d": 815,
+        "c_c": 40,
+        "d_bs": 11.3,
+        "d_b": 16,
+        "b_w": 350,
+        "rho_sk": 0.008,
+    }
     x["d_sk"] = value(crack_control.SKIN_DEPTH, x)
     x["h_sk"] = value(crack_control.SKIN_HEIGHT, x)
     x["b_sk"] = value(crack_control.SKIN_WIDTH, x)
-    assert (x["h_sk"], x["b_sk"]) == (pytest.approx(280), pytest.approx(118.6))
+    assert x["h_sk"] == pytest.approx(280)
+    assert x["b_sk"] == pytest.approx(118.6)
     x["A_cs"] = value(crack_control.SKIN_STRIPS, x)
     assert value(crack_control.SKIN_AREA, x) == pytest.approx(531, abs=0.5)
 
 
 def test_minimum_of_the_gallery_beam_flange_in_tension() -> None:
     """Hand: b_t = 2.5 x 380 = 950; 0.2 sqrt(32) x 950 x 620/400 = 1666 mm2."""
-    x = {"b_f": 3100.0, "b_w": 380.0, "f_c": 32.0, "h": 620.0, "f_y": 400.0}
+    x: dict[str, float] = {"b_f": 3100.0, "b_w": 380.0, "f_c": 32.0, "h": 620.0, "f_y": 400.0}
     x["b_t"] = value(minimum.WIDTH_FLANGE_T, x)
     assert value(minimum.A_S_MIN, x) == pytest.approx(1666, abs=0.5)
 

@@ -128,7 +128,9 @@ def test_worked_number(row: Worked) -> None:
     *steps, result = row.chain.split(" = ")
     assert steps
     for step in steps:
-        assert calculate(step) == pytest.approx(float(result), abs=0.6 * last_digit(result), rel=3e-5)
+        assert calculate(step) == pytest.approx(
+            float(result), abs=0.6 * last_digit(result), rel=3e-5
+        )
     found = formula.function(*internal(row.given, formula.names)) / IN_N_MM[formula.unit]
     assert found == pytest.approx(float(result), abs=0.6 * last_digit(result))
 

@@ -52,15 +52,21 @@ _CALLS = {
     SECTION: "beam.section()",
     BARS: "beam.bars()",
     basics.COVER: "beam.bars()",
+    COMPRESSION_BARS: "beam.bars()",
+    BALANCED: "beam.balanced()",
     REQUIRED: "beam.flexure()",
     FLEXURE: "beam.flexure()",
-    BALANCED: "beam.balanced()",
     SECOND_PATH: "beam.second_path()",
+    f"{SECOND_PATH}-balanced": "beam.second_path()",
     MINIMUM: "beam.minimum_steel()",
     TOP_STEEL: "beam.top_steel()",
     CRACKS: "beam.crack_control()",
     "summary": "beam.summary()",
+    "capacity": "beam.summary()",
 }
+"""The call that makes each part, in the order of the calculation."""
+_SINGLY = (REQUIRED, "capacity")
+"""Parts of a beam without compression bars only."""
 
 
 class FloorBeam:
@@ -283,9 +289,8 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, pair: CodePair) -> FloorBeam:
     sheet.member = f"floor beam, one simple span, {inputs.shape} section"
     sheet.scope = SCOPE
     sheet.not_covered = [dict(row) for row in NOT_COVERED]
-    sheet.expected = dict(_CALLS)
-    if inputs.compression_bars is not None:
-        del sheet.expected[REQUIRED]
+    left_out = (COMPRESSION_BARS,) if inputs.compression_bars is None else _SINGLY
+    sheet.expected = {key: call for key, call in _CALLS.items() if key not in left_out}
     basics.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair)
     return FloorBeam(sheet, inputs, pair)

@@ -258,12 +258,12 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
 def _check_geometry(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
     h, b_w = fields["h"], fields["b_w"]
     spacing, span = fields["spacing"], fields["span"]
-    if fields["shape"] != "rectangular" and spacing is not None and b_w is not None:
-        if spacing.value <= b_w.value:
-            faults.add(
-                f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
-                "write the distance between the centres of the beams"
-            )
+    tee = fields["shape"] != "rectangular" and None not in (spacing, b_w)
+    if tee and spacing.value <= b_w.value:
+        faults.add(
+            f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
+            "write the distance between the centres of the beams"
+        )
     if span is not None and h is not None and span.value < 2 * h.value:
         faults.add(
             f"span: {echo(given['span'])} is less than twice h of {echo(given['h'])}: a deep beam "

@@ -37,7 +37,8 @@ def record_loads(sheet: Sheet, inputs: FloorBeamInputs, *, figure: bool = True) 
         sheet.note(
             "load-notes",
             "The live load is not reduced for tributary area. Companion snow, wind and earthquake "
-            "loads are zero for this beam; dead load does not counteract, so 0.9 D does not govern.",
+            "loads are zero for this beam; dead load does not counteract, so 0.9 D does not "
+            "govern.",
             title="Not taken",
             clause="4.1.5.8",
         )

@@ -6,7 +6,7 @@ from typing import Any
 
 from lineproof.beams.bars import BarLayers, bars_text, read_bars
 from lineproof.beams.basics import GIVEN, MATERIALS, record_materials
-from lineproof.beams.capacity import record_capacity
+from lineproof.beams.capacity import SHARES, record_capacity
 from lineproof.beams.flexure import (
     BALANCED,
     FLEXURE,
@@ -42,6 +42,9 @@ _CALLS = {
     BALANCED: "study.balanced()",
     FLEXURE: "study.resistance()",
     SECOND_PATH: "study.second_path()",
+    f"{SECOND_PATH}-balanced": "study.second_path()",
+    "summary": "study.capacity()",
+    **{f"capacity-{share}": "study.capacity()" for share, _ in SHARES},
     "capacity": "study.capacity()",
 }
 _SIZES = ("b_w", "h", "f_c", "gamma_c", "cover", "aggregate")

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import argparse
+import os
 import sys
 from collections.abc import Sequence
 from dataclasses import replace
@@ -41,8 +42,11 @@ def _check_names(paths: Sequence[Path], folder: Path) -> None:
     twice = sorted({stem for stem in stems if stems.count(stem) > 1})
     if twice:
         raise UserError(f"two notebooks are called {twice[0]!r}; issue them into two folders")
-    if folder.exists() and not folder.is_dir():
-        raise UserError(f"{folder}: is a file, not a folder; choose another with --into")
+    standing = next(place for place in (folder, *folder.absolute().parents) if place.exists())
+    if not standing.is_dir():
+        raise UserError(f"{standing}: is a file, not a folder; choose another with --into")
+    if not os.access(standing, os.W_OK):
+        raise UserError(f"{standing}: cannot be written; choose another folder with --into")
 
 
 def _refuse_changes(reruns: Sequence[Rerun]) -> None:

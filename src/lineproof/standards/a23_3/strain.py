@@ -24,8 +24,9 @@ STRIPS = 100
 PEAK_OF_PARABOLA = 0.9
 STRAIN_AT_PEAK = 0.002
 PARABOLA = (
-    "Concrete curve: second-degree parabola from zero to a peak of 0.9 φc f′c at a strain of "
-    "0.002, constant from there to εcu; steel elastic to φs fy, then constant."
+    "The stress in the concrete follows a second-degree parabola from zero to a peak of 0.9 times "
+    "the factored strength at a strain of 0.002 and stays constant from there to the strain at "
+    "crushing; the bars are elastic up to their factored yield strength, then constant."
 )
 _STEPS = 200
 
