@@ -34,7 +34,8 @@ def execute(
         DeadKernelError,
     )
 
-    notebook = nbformat.from_dict(_cleared(data))  # type: ignore[no-untyped-call]
+    node: Any = nbformat.from_dict  # carries no types
+    notebook = node(_cleared(data))
     with tempfile.TemporaryDirectory(prefix="lineproof-") as scratch:
         log = Path(scratch) / "kernel.log"
         try:
@@ -120,7 +121,8 @@ def _stored(notebook: Any) -> str:
     notebook.metadata["kernelspec"] = dict(_KERNEL)
     # The kernel reports its exact version here, which differs from machine to machine.
     notebook.metadata["language_info"] = dict(_LANGUAGE)
-    text: str = v4.writes(notebook)  # type: ignore[no-untyped-call]
+    writes: Any = v4.writes  # carries no types
+    text: str = writes(notebook)
     return text.rstrip("\n") + "\n"
 
 
