@@ -12,7 +12,7 @@ import pytest
 
 from lineproof.record import Record
 
-from .gallery import bars_of, holds, number, record_of
+from .gallery import EDGE, bars_of, holds, number, record_of
 from .pocket import calculate, faults
 
 HAND = {
@@ -176,3 +176,11 @@ def test_minimum_with_the_flange_in_tension_by_cracking() -> None:
     d, force = 570.7, 16.6816 * 380
     a = d - math.sqrt(d * d - 2 * check["left"] * 1e6 / force)
     assert force * a / 340 == pytest.approx(2450, rel=0.02)
+
+
+def test_minimum_of_an_edge_beam_with_the_flange_in_tension() -> None:
+    """Flange on one side: b_t = 1.5 x 380 = 570, 0.2 sqrt(32) x 570 x 620/400 = 999.6 mm2."""
+    record = record_of(**EDGE, ends="cast with a column", top_bars="2-10M")
+    assert number(record, "top-steel/b_t") == pytest.approx(570)
+    assert number(record, "top-steel/A_smin") == pytest.approx(999.6, abs=0.06)
+    assert "top-steel/minimum-steel" in record.failed

@@ -373,7 +373,7 @@ def _failing(_: float) -> float:
          "s: procedure 'failing' failed"),
     ],
 )  # fmt: skip
-def test_wrong_found_values(  # noqa: PLR0917 - one column of the table each
+def test_wrong_found_values(
     sheet: Sheet, made: Procedure, closing: Any, unit: str, add: float, sentence: str
 ) -> None:
     with sheet.part("p", "P"):

@@ -45,7 +45,7 @@ class Entry:
 
     digest_: str
 
-    def __init__(  # noqa: PLR0917 - the hot path: keywords cost time
+    def __init__(
         self,
         part: Part,
         symbol: str,

@@ -166,7 +166,7 @@ class Sheet(Parts):
         part.entries[name] = self._scope_of_part[name] = made
         return made
 
-    def _general_line(  # noqa: PLR0917 - what `line` was called with, passed on
+    def _general_line(
         self,
         formula: Formula | str,
         unit: str | None,
@@ -238,7 +238,7 @@ class Sheet(Parts):
         extra = {"exception": exception} if exception else {}
         return self._compare(CHECK, test, key, title, unit, extra, bound)
 
-    def _compare(  # noqa: PLR0917 - what `decide` or `check` was called with, passed on
+    def _compare(
         self,
         kind: str,
         test: Criterion | str,
