@@ -10,6 +10,7 @@ from typing import Any
 
 import pytest
 
+from lineproof.beams.choice import top_candidates
 from lineproof.errors import UserError
 from lineproof.record import Record
 
@@ -128,3 +129,17 @@ def test_choice_does_not_rest_on_an_earlier_run() -> None:
     first = bars_of(beam.sheet.close())
     run(beam, calls)
     assert bars_of(beam.sheet.close()) == first == "4-25M"
+
+
+@pytest.mark.parametrize("sides", [1, 2])
+def test_top_candidates_by_mass(sides: int) -> None:
+    """Web bars and the bars of one overhang or two, 212.8 mm2 in each: least mass first."""
+    made = [
+        (web.number * SIZES[web.size][1], overhang * SIZES[web.size][1])
+        for web, overhang in top_candidates(212.8, sides)
+    ]
+    assert all(each >= 212.8 for _, each in made)
+    masses = [web + sides * each for web, each in made]
+    assert masses == sorted(masses)
+    # 2-15M in the web: 400 + 400 beside it on one side; on two sides 400 + 800
+    assert masses[0] == (800 if sides == 1 else 1200)

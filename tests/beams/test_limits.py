@@ -90,3 +90,12 @@ def test_us_units_go_through() -> None:
     assert number(record, "given/h") == pytest.approx(609.6)
     assert list(faults(record.data)) == []
     assert recompute(record) == []
+
+
+def test_cover_of_the_thickest_bars_in_either_layer() -> None:
+    """Class C-1: 2.0 x 35.7 = 71.4 mm over 35M above 25M, against 60 + 11.3 = 71.3 mm."""
+    record = record_of(
+        bottom_bars="3-25M / 3-35M", exposure="C-1", cover="60 mm", f_c="35 MPa", ends="free"
+    )
+    assert number(record, "cover/c_rb") == pytest.approx(71.4)
+    assert "cover/cover-bars" in record.failed

@@ -1,0 +1,168 @@
+"""Which spans carry live load, with which factors: arrangements, combinations, cases.
+
+A23.3, 9.2.3.1: factored dead load on all spans with factored live load on two adjacent spans, on
+alternate spans, and on all spans. Alternate spans give the largest span moments there are. Two
+adjacent spans do not give the largest support moment there is when there are three spans or more:
+that needs every other span beyond the two loaded as well (``beyond=True``). NBC 4.1.5.3 asks for
+any portions, so the wider set is on offer; the difference is shown in the tests.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Collection, Iterable, Sequence
+from dataclasses import dataclass
+from itertools import product
+
+import numpy as np
+
+from lineproof.beams.analysis.curves import Floats
+from lineproof.beams.analysis.solve import Row
+from lineproof.errors import UserError
+from lineproof.standards.nbc.combinations import CASES, Case, Companion
+
+LIVE = ("L", "L_st")
+"""Load types placed by arrangement; ``L_st`` is live load of storage, equipment and the like."""
+LOAD_TYPES = ("D", "L", "L_st", "S", "W", "E")
+_TYPES_OF = {"L": LIVE}
+"""Load types that stand behind a letter of the table."""
+
+
+@dataclass(frozen=True, slots=True)
+class Arrangement:
+    """The spans that carry live load, numbered from 1."""
+
+    name: str
+    spans: frozenset[int]
+
+
+@dataclass(frozen=True, slots=True)
+class Combination:
+    """Factors by load type, as the code's table gives them; absent types do not act."""
+
+    name: str
+    clause: str
+    factors: tuple[tuple[str, float], ...]
+
+    def factor(self, kind: str) -> float:
+        """Return the factor of a load type, 0 if it does not act."""
+        return dict(self.factors).get(kind, 0.0)
+
+
+@dataclass(frozen=True, slots=True)
+class LoadCase:
+    """One combination with one arrangement; ``arrangement`` is "" where none has a meaning."""
+
+    combination: str
+    arrangement: str
+
+    def __str__(self) -> str:
+        """Name both: ``1.25D + 1.5L, live load on spans 1, 3``."""
+        return ", ".join(part for part in (self.combination, self.arrangement) if part)
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Cases:
+    """Load cases with their factors (cases, rows) on the rows of a solution."""
+
+    names: tuple[LoadCase, ...]
+    factors: Floats
+
+
+def _named(spans: Iterable[int]) -> Arrangement:
+    loaded = sorted(spans)
+    if not loaded:
+        return Arrangement("no live load", frozenset())
+    word = "span" if len(loaded) == 1 else "spans"
+    return Arrangement(f"live load on {word} {', '.join(map(str, loaded))}", frozenset(loaded))
+
+
+def standard_arrangements(spans: int, *, beyond: bool = False) -> tuple[Arrangement, ...]:
+    """Return the arrangements of 9.2.3.1; a cantilever counts as a span.
+
+    ``beyond`` adds, for every support, the two adjacent spans with every other span beyond them.
+
+    >>> [a.name for a in standard_arrangements(3)]  # doctest: +NORMALIZE_WHITESPACE
+    ['live load on spans 1, 2, 3', 'live load on spans 1, 3', 'live load on span 2',
+     'live load on spans 1, 2', 'live load on spans 2, 3']
+    """
+    numbers = range(1, spans + 1)
+    sets = [set(numbers), set(numbers[::2]), set(numbers[1::2])]
+    sets += [{left, left + 1} for left in numbers[:-1]]
+    if beyond:
+        sets += [
+            {*range(left, 0, -2), *range(left + 1, spans + 1, 2)} for left in numbers[:-1]
+        ]
+    return tuple(dict.fromkeys(_named(s) for s in sets if s))
+
+
+def all_arrangements(spans: int) -> tuple[Arrangement, ...]:
+    """Return all 2^n ways to load n spans, for tests; at most 12 spans."""
+    if spans > 12:  # noqa: PLR2004 - 4096 arrangements
+        raise UserError(f"arrangements: 2^{spans} of them are too many; use the standard set")
+    return tuple(
+        _named(number for number, loaded in enumerate(choice, start=1) if loaded)
+        for choice in product((False, True), repeat=spans)
+    )
+
+
+def check_types(kinds: Iterable[str]) -> tuple[str, ...]:
+    """Return the load types present, in the table's order; refuse a type it does not know."""
+    present = set(kinds)
+    unknown = sorted(present - set(LOAD_TYPES))
+    if unknown:
+        raise UserError(
+            f"load type {kind!r} has no factor in NBC 4.1.3.2; write one of {', '.join(LOAD_TYPES)}"
+            for kind in unknown
+        )
+    return tuple(kind for kind in LOAD_TYPES if kind in present)
+
+
+def factored_combinations(kinds: Iterable[str]) -> tuple[Combination, ...]:
+    """Return the strength combinations of NBC 4.1.3.2 for the load types present.
+
+    Every case stands with either dead load factor, with each companion, and without one.
+    """
+    present = check_types(kinds)
+    made: dict[tuple[tuple[str, float], ...], Combination] = {}
+    for case in CASES:
+        if case.principal is None or set(_behind(case.principal[0])) & set(present):
+            for factors in _of_case(case, present):
+                name = _sum_of(factors)
+                made.setdefault(factors, Combination(name, "NBC 4.1.3.2", factors))
+    return tuple(made.values())
+
+
+def _behind(letter: str) -> tuple[str, ...]:
+    return _TYPES_OF.get(letter, (letter,))
+
+
+def _of_case(case: Case, present: Sequence[str]) -> list[tuple[tuple[str, float], ...]]:
+    principal = {}
+    if case.principal is not None:
+        letter, factor = case.principal
+        principal = {kind: float(factor) for kind in _behind(letter) if kind in present}
+    companions = [_companion(c, present) for c in case.companions]
+    beside = [{}, *(c for c in companions if c)]
+    dead = case.dead if "D" in present else ("0",)
+    return [
+        tuple(({"D": float(d)} if "D" in present else {} | principal | other).items())
+        if "D" not in present
+        else tuple(({"D": float(d)} | principal | other).items())
+        for d in dead
+        for other in beside
+    ]
+
+
+def _companion(companion: Companion, present: Sequence[str]) -> dict[str, float]:
+    """Return factors of a companion; live load of storage takes its extra."""
+    extra = {"L_st": float(companion.storage_extra)}
+    return {
+        kind: float(companion.factor) + extra.get(kind, 0.0)
+        for kind in _behind(companion.load)
+        if kind in present
+    }
+
+
+def _sum_of(factors: Sequence[tuple[str, float]]) -> str:
+    """Write a combination as a sum: ``1.25D + 1.5L``."""
+    return " + ".join(f"{factor:.12g}{kind}" for kind, factor in factors)
