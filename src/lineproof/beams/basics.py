@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.flexure import confirmed_value
+from lineproof.beams.flexure import YIELD_CLAUSE, confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
 from lineproof.beams.layout import BARS
 from lineproof.beams.steps import Steps
@@ -56,19 +56,22 @@ def record_materials(sheet: Sheet, density: str, grade: str, pair: CodePair) -> 
         sheet.line(stress_block.ALPHA_1)
         sheet.line(stress_block.BETA_1)
         for clause, what in pair.changed:
-            used = (
-                "the rule of A23.3-14 is used until the office confirms the value in its own copy."
-                if confirmed_value(sheet.project, pair) is None
-                else "the value that the office confirmed in its own copy is used."
-            )
-            sheet.note(
-                f"changed-{clause.replace('.', '-')}",
-                f"{pair.concrete} changed clause {clause} ({what}). "
-                f"Its text is not known here: {used}",
-                title=f"Clause {clause} of {pair.concrete}",
-                clause=clause,
-                basis=f"from memory of A23.3-14; changed in {pair.concrete}",
-            )
+            _record_change(sheet, pair, clause, what)
+
+
+def _record_change(sheet: Sheet, pair: CodePair, clause: str, what: str) -> None:
+    """Record that an edition's text of a clause is not known here, and what is used instead."""
+    code = pair.building if clause.startswith("4.") else pair.concrete
+    used = "the rule known before is used until the office confirms this one in its own copy."
+    if clause == YIELD_CLAUSE and confirmed_value(sheet.project, pair) is not None:
+        used = "the value that the office confirmed in its own copy is used."
+    sheet.note(
+        f"changed-{clause.replace('.', '-')}",
+        f"Clause {clause}: {what}. Its text in {code} is not known here: {used}",
+        title=f"Clause {clause} of {code}",
+        clause=clause,
+        basis=f"from memory of an earlier edition; to be read in {code}",
+    )
 
 
 def _record_modulus(sheet: Sheet, density: str) -> None:

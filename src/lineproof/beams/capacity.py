@@ -17,16 +17,20 @@ from lineproof.standards.a23_3 import flexure
 
 SHARES = ((25, clause.QUARTER), (50, clause.HALF), (75, clause.THREE_QUARTERS), (100, clause.WHOLE))
 _POINTS = 40
+_OVER = (
+    "There is more reinforcement than the balanced condition holds: the bars do not yield, and the "
+    "closed forms of the curve do not apply."
+)
 _MATERIALS = ("alpha_1", "phi_c", "f_c", "phi_s", "f_y")
 
 
-def curve(sheet: Sheet, shape: Shape, most: float) -> list[tuple[float, float]]:
-    """Return pairs (A_s / A_s,b, M_r [N.mm]) from nothing to ``most`` times the balanced steel."""
+def curve(sheet: Sheet, shape: Shape) -> list[tuple[float, float]]:
+    """Return pairs (A_s / A_s,b, M_r [N.mm]) from nothing to the balanced steel."""
     place = midspan(sheet, shape).place
     values = {n: sheet.find(n).value for n in _MATERIALS}
     values |= {n: place[n].value for n in ("b", "b_w", "h_f", "d")}
     balanced = sheet.entry("balanced/A_sb").value
-    ratios = [most * i / _POINTS for i in range(_POINTS + 1)]
+    ratios = [i / _POINTS for i in range(_POINTS + 1)]
     return [(r, _resistance(values | {"A_s": r * balanced}, shape)) for r in ratios]
 
 
@@ -75,10 +79,16 @@ def record_capacity(
         ratio = sheet.line(clause.RATIO, A_s=A_s, A_sb=balanced)
         if shares:
             _record_table(sheet, shares)
-        most = max(1.0, ratio.value * 1.05)
-        points = curve(sheet, shape, most)
+        if ratio.value > 1:
+            sheet.note("no-curve", _OVER, title="No curve")
+            return
         record_capacity_figure(
-            sheet, points, (ratio.value, M_r.value), label, levels, [A_s, M_r, balanced]
+            sheet,
+            curve(sheet, shape),
+            (ratio.value, M_r.value),
+            label,
+            levels,
+            [A_s, M_r, balanced],
         )
 
 

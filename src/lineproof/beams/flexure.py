@@ -20,6 +20,7 @@ from lineproof.standards.codes import CodePair
 BALANCED = "balanced"
 REQUIRED = "required-steel"
 FLEXURE = "flexure"
+YIELD_CLAUSE = "10.5.2"
 _LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
 
 
@@ -130,10 +131,12 @@ def record_yield(steps: Steps, pair: CodePair) -> None:
     else:
         c_d = steps.sheet.given(
             "c_d", str(value["value"]), source=f"{pair.concrete}, 10.5.2, confirmed by "
-            f"{value.get('by', '')}, {value.get('on', '')}", clause="10.5.2",
+            f"{value.get('by', '')}, {value.get('on', '')}", clause=YIELD_CLAUSE,
         )  # fmt: skip
         steps.bind(c_d=c_d)
     steps.check(clause.YIELDS)
+    if "d_2" in steps.place:
+        steps.check(clause.UPPER_LAYER_YIELDS)
 
 
 def confirmed_value(project: Mapping[str, Any], pair: CodePair) -> Mapping[str, Any] | None:
@@ -141,10 +144,11 @@ def confirmed_value(project: Mapping[str, Any], pair: CodePair) -> Mapping[str, 
 
     Raises :class:`UserError` if it is not a ratio c/d, between 0 and 1.
     """
-    if not any(number == "10.5.2" for number, _ in pair.changed):
+    if not any(number == YIELD_CLAUSE for number, _ in pair.changed):
         return None
     for row in project.get("confirmed", ()):
-        if row.get("clause") == "10.5.2" and row.get("edition") == pair.concrete and "value" in row:
+        mine = row.get("clause") == YIELD_CLAUSE and row.get("edition") == pair.concrete
+        if mine and "value" in row:
             _check_ratio(row["value"])
             return dict(row)
     return None
@@ -187,7 +191,7 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
     in_flange = shape == "rectangular" or bool(steps.decide(double.STAYS_IN_FLANGE))
     closing = double.CLOSES if in_flange else double.CLOSES_TEE
     steps.found(
-        "c", strain.AXIS["compression bars"], closing, unit="mm", clause="10.1.2",
+        "c", strain.AXIS["compression bars"], closing, unit="mm", clause="10.1.1",
         title="Depth of the neutral axis, by equilibrium",
     )  # fmt: skip
     steps.lines(double.STRESS, double.FORCE, double.BLOCK)

@@ -290,7 +290,7 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, pair: CodePair) -> FloorBeam:
     sheet.scope = SCOPE
     sheet.not_covered = [dict(row) for row in NOT_COVERED]
     left_out = (COMPRESSION_BARS,) if inputs.compression_bars is None else _SINGLY
-    sheet.expected = {key: call for key, call in _CALLS.items() if key not in left_out}
+    sheet.expect({key: call for key, call in _CALLS.items() if key not in left_out})
     basics.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair)
     return FloorBeam(sheet, inputs, pair)

@@ -20,6 +20,8 @@ Shape = Literal["T", "L", "rectangular"]
 SHAPES = ("T", "L", "rectangular")
 ENDS = ("free", "cast with a girder", "cast with a column")
 SNOWED_ON = ("roof", "exterior balcony")
+LEAST_NORMAL = 2150.0
+"""Least density of normal-density concrete [kg/m3] (from memory)."""
 MINIMUM_RULES = ("10.5.1.1", "10.5.1.2")
 
 
@@ -200,6 +202,7 @@ def read_floor_beam(
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
     }  # fmt: skip
     take("web_openings", _no_openings)
+    _check_density(fields, given, reader.faults)
     _check_flange(fields, given, reader.faults)
     reader.smaller("h_f", "h", fields)
     _check_geometry(fields, given, reader.faults)
@@ -252,6 +255,15 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
         faults.add(
             f"h_f: {echo(given['h_f'])} is not thicker than its cover of {echo(given['cover'])}; "
             "write a thicker slab"
+        )
+
+
+def _check_density(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    gamma_c = fields["gamma_c"]
+    if fields["density"] == "normal" and gamma_c is not None and gamma_c.value < LEAST_NORMAL:
+        faults.add(
+            f"gamma_c: {echo(given['gamma_c'])} is not normal density; write at least "
+            f"'{LEAST_NORMAL:g} kg/m3', or density = 'semi-low' or 'low'"
         )
 
 

@@ -22,7 +22,7 @@ def record_proof(steps: Steps, case: str, M_r: Entry) -> None:
         values = {n: steps.entry(n).value for n in names}
         steps.found(
             "c_l", strain.AXIS[case], strain.closing(case, values), unit="mm",
-            title="Depth of the neutral axis, by layers and strains", clause="10.1.2",
+            title="Depth of the neutral axis, by layers and strains", clause="10.1.1",
         )  # fmt: skip
     steps.found(
         "M_l", strain.MOMENT[case], strain.MOMENT_BOUND, unit="kN.m",

@@ -156,7 +156,7 @@ def _start(
     sheet.member = f"section study, {shape} section"
     sheet.scope = SCOPE
     sheet.not_covered = [dict(row) for row in NOT_COVERED]
-    sheet.expected = dict(_CALLS)
+    sheet.expect(_CALLS)
     symbols = {"cover": "c_c", "aggregate": "a_max"}
     with sheet.part(GIVEN, "Given"):
         for name in ("b_f", "h_f", "b_w", "h", "f_c", "gamma_c", "cover", "aggregate"):

@@ -71,8 +71,11 @@ def build(
 def record_digest(
     calc_id: str, codes: Mapping[str, str], entries: Iterable[Mapping[str, Any]]
 ) -> str:
-    """Hash the calculation; title, signatures and dates stay outside, so signing keeps it."""
-    pieces = [f"{e['id']}:{e['digest']}" for e in entries]
+    """Hash the calculation; title, signatures and dates stay outside, so signing keeps it.
+
+    The order in which the parts were run does not matter.
+    """
+    pieces = sorted(f"{e['id']}:{e['digest']}" for e in entries)
     return digest_of(calc_id, codes.get("pair", ""), *pieces)
 
 

@@ -52,6 +52,18 @@ class Parts:
         """The parts recorded so far, in order."""
         return tuple(self._parts.values())
 
+    def expect(self, calls: Mapping[str, str]) -> None:
+        """Say which parts the calculation must have and the call that makes each.
+
+        A part that was expected before and is no longer is forgotten: with other inputs there
+        may be no call left that could make it again.
+        """
+        for key in self.expected:
+            if key not in calls:
+                self._parts.pop(key, None)
+                self._stopped.pop(key, None)
+        self.expected = dict(calls)
+
     def adopt(self, parts: Iterable[Part]) -> None:
         """Take over recorded parts as they are."""
         self._parts.update((part.key, part) for part in parts)

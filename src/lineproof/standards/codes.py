@@ -23,13 +23,18 @@ class CodePair:
 
 
 _DUCTILITY = ("10.5.2", "limit of c/d: changed since A23.3-14")
+_UNSEEN = (
+    ("4.1.3.2", "load cases: this edition has not been seen"),
+    ("4.1.5.3", "specified live loads: this edition has not been seen"),
+    ("10.1.7", "stress block: assumed unchanged"),
+)
 
 CODE_PAIRS = {
     pair.name: pair
     for pair in (
         CodePair("NBC 2015 + A23.3-14", "NBC 2015", "CSA A23.3-14"),
         CodePair("NBC 2020 + A23.3:19", "NBC 2020", "CSA A23.3:19", (_DUCTILITY,)),
-        CodePair("NBC 2025 + A23.3:24", "NBC 2025", "CSA A23.3:24", (_DUCTILITY,)),
+        CodePair("NBC 2025 + A23.3:24", "NBC 2025", "CSA A23.3:24", (_DUCTILITY, *_UNSEEN)),
     )
 }
 

@@ -13,6 +13,11 @@ BENTZ_2006 = "Bentz, paper on the 2004 shear provisions, Springer 2006 (factor q
 F_R_QUOTED = "A23.3-14 as quoted in a public discussion of the cracking moment"
 G30_18_TABLE = "CSA G30.18 bar sizes, public tables of bar data"
 COVER_QUOTED = "A23.1 Table 17 as quoted in a public discussion (75 mm; 30 mm for beams, N)"
+NBC_SERVICE = "NBC 2020, Division B, Table 4.1.3.4; earlier editions: commentary only"
+SHEAR_2004 = "A23.3-04, public page excerpts of 11.3; later editions from memory"
+SHEAR_DERIVED = "follows from the general method of A23.3-04; rounding, later editions from memory"
+DEVELOPMENT_GUIDE = "public technical guide of a bar product: table of l_d to A23.3-14, reproduced"
+LONG_TERM_PAPER = "published paper on deflections of slabs (S and S/(1 + 50ρ′))"
 
 BASES = frozenset(
     {
@@ -25,5 +30,10 @@ BASES = frozenset(
         F_R_QUOTED,
         G30_18_TABLE,
         COVER_QUOTED,
+        NBC_SERVICE,
+        SHEAR_2004,
+        SHEAR_DERIVED,
+        DEVELOPMENT_GUIDE,
+        LONG_TERM_PAPER,
     }
 )

@@ -9,7 +9,7 @@ any portions, so the wider set is on offer; the difference is shown in the tests
 
 from __future__ import annotations
 
-from collections.abc import Collection, Iterable, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import product
 
@@ -25,6 +25,16 @@ LIVE = ("L", "L_st")
 LOAD_TYPES = ("D", "L", "L_st", "S", "W", "E")
 _TYPES_OF = {"L": LIVE}
 """Load types that stand behind a letter of the table."""
+TOGETHER = ("E",)
+"""Principal loads whose companions act together (case 5), not one or the other."""
+
+SERVICE_CASES = (
+    Case(0, ("1.0",)),
+    Case(1, ("1.0",), ("L", "1.0"), (Companion("W", "0.3"), Companion("S", "0.35"))),
+    Case(2, ("1.0",), ("W", "1.0"), (Companion("L", "0.35", "0.15"), Companion("S", "0.35"))),
+    Case(3, ("1.0",), ("S", "1.0"), (Companion("W", "0.3"), Companion("L", "0.35", "0.15"))),
+)
+"""NBC 2020, Table 4.1.3.4; live load of storage accompanies with 0.5 instead of 0.35."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -42,10 +52,6 @@ class Combination:
     name: str
     clause: str
     factors: tuple[tuple[str, float], ...]
-
-    def factor(self, kind: str) -> float:
-        """Return the factor of a load type, 0 if it does not act."""
-        return dict(self.factors).get(kind, 0.0)
 
 
 @dataclass(frozen=True, slots=True)
@@ -76,6 +82,9 @@ def _named(spans: Iterable[int]) -> Arrangement:
     return Arrangement(f"live load on {word} {', '.join(map(str, loaded))}", frozenset(loaded))
 
 
+_EVERYWHERE = Arrangement("", frozenset())
+
+
 def standard_arrangements(spans: int, *, beyond: bool = False) -> tuple[Arrangement, ...]:
     """Return the arrangements of 9.2.3.1; a cantilever counts as a span.
 
@@ -89,9 +98,7 @@ def standard_arrangements(spans: int, *, beyond: bool = False) -> tuple[Arrangem
     sets = [set(numbers), set(numbers[::2]), set(numbers[1::2])]
     sets += [{left, left + 1} for left in numbers[:-1]]
     if beyond:
-        sets += [
-            {*range(left, 0, -2), *range(left + 1, spans + 1, 2)} for left in numbers[:-1]
-        ]
+        sets += [{*range(left, 0, -2), *range(left + 1, spans + 1, 2)} for left in numbers[:-1]]
     return tuple(dict.fromkeys(_named(s) for s in sets if s))
 
 
@@ -121,48 +128,87 @@ def factored_combinations(kinds: Iterable[str]) -> tuple[Combination, ...]:
     """Return the strength combinations of NBC 4.1.3.2 for the load types present.
 
     Every case stands with either dead load factor, with each companion, and without one.
+
+    >>> [c.name for c in factored_combinations(["D", "L"])]
+    ['1.4D', '1.25D + 1.5L', '0.9D + 1.5L']
     """
+    return _combinations(CASES, "NBC 4.1.3.2", kinds)
+
+
+def service_combinations(kinds: Iterable[str]) -> tuple[Combination, ...]:
+    """Return the service combinations of NBC 2020, 4.1.3.4, and dead load alone.
+
+    >>> [c.name for c in service_combinations(["D", "L"])]
+    ['1D', '1D + 1L']
+    """
+    return _combinations(SERVICE_CASES, "NBC 4.1.3.4", kinds)
+
+
+def _combinations(
+    cases: Iterable[Case], clause: str, kinds: Iterable[str]
+) -> tuple[Combination, ...]:
     present = check_types(kinds)
-    made: dict[tuple[tuple[str, float], ...], Combination] = {}
-    for case in CASES:
-        if case.principal is None or set(_behind(case.principal[0])) & set(present):
-            for factors in _of_case(case, present):
-                name = _sum_of(factors)
-                made.setdefault(factors, Combination(name, "NBC 4.1.3.2", factors))
+    made = {
+        factors: Combination(_sum_of(factors), clause, factors)
+        for case in cases
+        if case.principal is None or _acting(case.principal[0], present)
+        for factors in _of_case(case, present)
+        if factors
+    }
     return tuple(made.values())
 
 
-def _behind(letter: str) -> tuple[str, ...]:
-    return _TYPES_OF.get(letter, (letter,))
+def _acting(letter: str, present: Sequence[str]) -> list[str]:
+    return [kind for kind in _TYPES_OF.get(letter, (letter,)) if kind in present]
 
 
-def _of_case(case: Case, present: Sequence[str]) -> list[tuple[tuple[str, float], ...]]:
+def _of_case(case: Case, present: Sequence[str]) -> Iterator[tuple[tuple[str, float], ...]]:
+    """Yield the factors of one case: every dead load factor with every companion, and none."""
     principal = {}
     if case.principal is not None:
         letter, factor = case.principal
-        principal = {kind: float(factor) for kind in _behind(letter) if kind in present}
-    companions = [_companion(c, present) for c in case.companions]
-    beside = [{}, *(c for c in companions if c)]
-    dead = case.dead if "D" in present else ("0",)
-    return [
-        tuple(({"D": float(d)} if "D" in present else {} | principal | other).items())
-        if "D" not in present
-        else tuple(({"D": float(d)} | principal | other).items())
-        for d in dead
-        for other in beside
-    ]
+        principal = {kind: float(factor) for kind in _acting(letter, present)}
+    beside = [_companion(companion, present) for companion in case.companions]
+    if case.principal is not None and case.principal[0] in TOGETHER:
+        beside = [{kind: f for companion in beside for kind, f in companion.items()}]
+    for dead in case.dead:
+        first = {"D": float(dead)} if "D" in present else {}
+        for other in ({}, *filter(None, beside)):
+            yield tuple((first | principal | other).items())
 
 
 def _companion(companion: Companion, present: Sequence[str]) -> dict[str, float]:
-    """Return factors of a companion; live load of storage takes its extra."""
+    """Return the factors of a companion; live load of storage takes its extra."""
     extra = {"L_st": float(companion.storage_extra)}
     return {
         kind: float(companion.factor) + extra.get(kind, 0.0)
-        for kind in _behind(companion.load)
-        if kind in present
+        for kind in _acting(companion.load, present)
     }
 
 
 def _sum_of(factors: Sequence[tuple[str, float]]) -> str:
     """Write a combination as a sum: ``1.25D + 1.5L``."""
     return " + ".join(f"{factor:.12g}{kind}" for kind, factor in factors)
+
+
+def cases_of(
+    rows: Sequence[Row], combinations: Iterable[Combination], arrangements: Iterable[Arrangement]
+) -> Cases:
+    """Return every combination with every arrangement as factors on the rows of a solution.
+
+    Dead and other loads act on all spans. Cases that load the beam alike stand once.
+    """
+    placements = tuple(arrangements)
+    kept: dict[tuple[float, ...], LoadCase] = {}
+    for combination in combinations:
+        factors = dict(combination.factors)
+        arranged = any(factors.get(kind) and kind in LIVE for kind, _ in rows)
+        for arrangement in placements if arranged else (_EVERYWHERE,):
+            row = tuple(
+                factors.get(kind, 0.0)
+                if kind not in LIVE or not arranged or span in arrangement.spans
+                else 0.0
+                for kind, span in rows
+            )
+            kept.setdefault(row, LoadCase(combination.name, arrangement.name))
+    return Cases(tuple(kept.values()), np.array(list(kept), dtype=float).reshape(-1, len(rows)))

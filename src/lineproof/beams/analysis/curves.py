@@ -71,13 +71,15 @@ class Curves:
         """Return M [N.mm] at the stations x: shape (cases, stations)."""
         u, c, v = self._passed(x)
         start = self.M0[:, None] + self.V0[:, None] * x
-        return start - self.w @ (c * (u - c / 2)) - self.P @ v
+        moment: Floats = start - self.w @ (c * (u - c / 2)) - self.P @ v
+        return moment
 
     def shear(self, x: Floats, side: Side = "right") -> Floats:
         """Return V [N] at the stations x; beside a point load, on the side asked for."""
         _, c, _ = self._passed(x)
         behind = x > self.breaks[:, None] if side == "left" else x >= self.breaks[:, None]
-        return self.V0[:, None] - self.w @ c - self.P @ behind.astype(float)
+        shear: Floats = self.V0[:, None] - self.w @ c - self.P @ behind.astype(float)
+        return shear
 
     def slope(self, x: Floats) -> Floats:
         """Return the slope [rad] at the stations x."""
@@ -198,7 +200,9 @@ class Curves:
 def _extremes(values: Floats, stations: Floats) -> Extremes:
     rows = np.arange(len(values))
     high, low = values.argmax(axis=1), values.argmin(axis=1)
-    return Extremes(values[rows, high], stations[rows, high], values[rows, low], stations[rows, low])
+    return Extremes(
+        values[rows, high], stations[rows, high], values[rows, low], stations[rows, low]
+    )
 
 
 def _zeros(M: float, V: float, w: float) -> list[float]:

@@ -73,7 +73,9 @@ class Support:
             _check_positive(faults, f"column {number}: length", column.length, "mm")
             _check_positive(faults, f"column {number}: EI", column.EI, "N.mm2")
             if column.far_end not in FAR_ENDS:
-                faults.add(f"column {number}: far end {column.far_end!r}; write 'fixed' or 'pinned'")
+                faults.add(
+                    f"column {number}: far end {column.far_end!r}; write 'fixed' or 'pinned'"
+                )
         if not columns:
             faults.add("columns: none given; write at least one column, or a simple support")
         faults.raise_if_any()
@@ -293,5 +295,3 @@ def _check_load(beam: Beam, load: Load, name: str, faults: FaultList) -> None:
             f"{name}: from {load.start:g} to {load.end:g} mm is not inside span {load.span} of "
             f"{length:g} mm; write 0 <= start < end <= length"
         )
-
-

@@ -64,7 +64,7 @@ class Solution:
         return self.spans[number - 1]
 
     def combined(self, factors: Floats) -> Solution:
-        """Return the solution of cases that are sums of these rows: ``factors`` is (cases, rows)."""
+        """Return the solution of cases that are sums of these rows; factors (cases, rows)."""
         return Solution(
             self.beam,
             tuple(("case", number) for number in range(1, len(factors) + 1)),
@@ -119,7 +119,8 @@ def _placed(beam: Beam, number: int, loads: Sequence[Load], rows: Sequence[Row])
             w[row, index[start] : index[end]] += load.w
     none = np.zeros(len(rows))
     return Curves(
-        float(span.length), float(span.EI), np.array(breaks), w, P, none, none, none, none)
+        float(span.length), float(span.EI), np.array(breaks), w, P, none, none, none, none
+    )
 
 
 def _edges(load: Load, length: float) -> tuple[float, ...]:
@@ -230,13 +231,29 @@ def _hung(curves: Curves, at_root: Floats) -> Curves:
     """Return a cantilever on the left, its slope and deflection counted from its root."""
     none = np.zeros_like(at_root)
     level = Curves(
-        curves.length, curves.EI, curves.breaks, curves.w, curves.P, curves.M0, curves.V0, none, none
+        curves.length,
+        curves.EI,
+        curves.breaks,
+        curves.w,
+        curves.P,
+        curves.M0,
+        curves.V0,
+        none,
+        none,
     )
     root = np.array([curves.length])
     slope0 = at_root - level.slope(root)[:, 0]
     y0 = -(level.deflection(root)[:, 0] + slope0 * curves.length)
     return Curves(
-        curves.length, curves.EI, curves.breaks, curves.w, curves.P, curves.M0, curves.V0, slope0, y0
+        curves.length,
+        curves.EI,
+        curves.breaks,
+        curves.w,
+        curves.P,
+        curves.M0,
+        curves.V0,
+        slope0,
+        y0,
     )
 
 

@@ -77,7 +77,7 @@ FITS = _criterion(
 DEPTH_FIRST = _formula(
     "d_1 = h - c_c - d_bs - d_b/2",
     title="Depth to the first layer",
-    clause="2.3",
+    clause="geometry",
     basis=MECHANICS,
 )
 LAYER_DISTANCE = _formula(
@@ -91,13 +91,13 @@ DEPTH_SECOND = _formula(
     "d_2 = d_1 - d_b/2 - s_l - d_b2/2",
     unit="mm",
     title="Depth to the second layer",
-    clause="2.3",
+    clause="geometry",
     basis=MECHANICS,
 )
 DEPTH_TWO_LAYERS = _formula(
     "d = (A_s1*d_1 + A_s2*d_2)/(A_s1 + A_s2)",
     title="Effective depth, to the centroid of the bars",
-    clause="2.3",
+    clause="geometry",
     basis=MECHANICS,
 )
 TOP_AREA_T = _formula(
@@ -121,11 +121,11 @@ COMPRESSION_AREA = _formula(
 COMPRESSION_DEPTH = _formula(
     "d_p = c_c + d_bs + d_b/2",
     title="Depth to the compression bars",
-    clause="2.3",
+    clause="geometry",
     basis=MECHANICS,
 )
 DEPTH_ONE_LAYER = _formula(
-    "d = h - c_c - d_bs - d_b/2", title="Effective depth", clause="2.3", basis=MECHANICS
+    "d = h - c_c - d_bs - d_b/2", title="Effective depth", clause="geometry", basis=MECHANICS
 )
 AREA_OF_BARS = _formula("A_s = n_b*A_b", title="Area of the bars", clause="G30.18", basis=MECHANICS)
 TOTAL_AREA = _formula(

@@ -13,19 +13,19 @@ _criterion = partial(criterion, notation=NOTATION)
 
 STRESS = _formula(
     "f_sp = min(f_y, E_s*eps_cu*(c - d_p)/c)",
-    clause="10.1.6",
+    clause="8.5.3.2",
     title="Stress in the compression bars, from strains",
     basis=MECHANICS,
 )
 FORCE = _formula(
     "C_s = A_sp*(phi_s*f_sp - alpha_1*phi_c*f_c)",
-    clause="10.1.6",
+    clause="8.5.3.2",
     title="Compression in the bars, displaced concrete taken off",
     basis=MECHANICS,
 )
 FORCE_GROSS = _formula(
     "C_s = A_sp*phi_s*f_sp",
-    clause="10.1.6",
+    clause="8.5.3.2",
     title="Compression in the bars, displaced concrete neglected",
     basis=MECHANICS,
 )
@@ -45,7 +45,7 @@ CONCRETE_FORCE_TEE = _formula(
     basis=MECHANICS,
 )
 TENSION = _formula(
-    "T_s = phi_s*A_s*f_y", clause="10.1.6", title="Tension in the bars at yield", basis=MECHANICS
+    "T_s = phi_s*A_s*f_y", clause="8.5.3.2", title="Tension in the bars at yield", basis=MECHANICS
 )
 M_R = _formula(
     "M_r = C_c*(d - a/2) + C_s*(d - d_p)",
@@ -73,7 +73,7 @@ STAYS_IN_FLANGE = _criterion(
 IN_COMPRESSION = _criterion(
     "alpha_1*phi_c*f_c*b*beta_1*d_p <= phi_s*A_s*f_y",
     unit="kN",
-    clause="10.1.6",
+    clause="8.5.3.2",
     title="Whether the upper bars are in compression",
     basis=MECHANICS,
     yes="With the axis at the upper bars the concrete is too weak: the axis lies deeper, "
@@ -86,7 +86,7 @@ _TENSION = "phi_s*A_s*min(f_y, E_s*eps_cu*(d - c)/c)"
 CLOSES = _criterion(
     "abs(alpha_1*phi_c*f_c*b*beta_1*c + A_sp*(phi_s*min(f_y, E_s*eps_cu*(c - d_p)/c)"
     f" - alpha_1*phi_c*f_c) - {_TENSION}) <= 0.001*{_TENSION}",
-    clause="10.1.2",
+    clause="10.1.1",
     unit="kN",
     title="Equilibrium of the section",
     basis=MECHANICS,
@@ -96,7 +96,7 @@ CLOSES_TEE = _criterion(
     "abs(alpha_1*phi_c*f_c*((b - b_w)*h_f + b_w*beta_1*c)"
     " + A_sp*(phi_s*min(f_y, E_s*eps_cu*(c - d_p)/c) - alpha_1*phi_c*f_c)"
     f" - {_TENSION}) <= 0.001*{_TENSION}",
-    clause="10.1.2",
+    clause="10.1.1",
     unit="kN",
     title="Equilibrium of the section, flange and web",
     basis=MECHANICS,

@@ -80,7 +80,7 @@ NEEDS_SKIN = _criterion(
     key="skin-required",
 )
 SKIN_HEIGHT = _formula(
-    "h_sk = 0.5*h - 2*(h - d)",
+    "h_sk = max(0.5*h - 2*(h - d), 0)",
     clause="10.6.2",
     title="Height of the strips",
     basis=FROM_MEMORY,

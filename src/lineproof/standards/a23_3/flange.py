@@ -39,43 +39,43 @@ WIDTH_L = _formula(
 )
 
 AREA_TEE = _formula(
-    "A_g = b_w*h + (b_f - b_w)*h_f", title="Gross area", clause="8.6.4", basis=MECHANICS
+    "A_g = b_w*h + (b_f - b_w)*h_f", title="Gross area", clause="geometry", basis=MECHANICS
 )
 CENTROID_TEE = _formula(
     "y_b = (b_w*h*h/2 + (b_f - b_w)*h_f*(h - h_f/2))/A_g",
     title="Centroid above the bottom",
-    clause="8.6.4",
+    clause="geometry",
     basis=MECHANICS,
 )
 INERTIA_TEE = _formula(
     "I_g = b_w*h**3/12 + b_w*h*(y_b - h/2)**2"
     " + (b_f - b_w)*h_f**3/12 + (b_f - b_w)*h_f*(h - h_f/2 - y_b)**2",
     title="Moment of inertia about the centroid",
-    clause="8.6.4",
+    clause="geometry",
     basis=MECHANICS,
 )
-AREA_RECTANGLE = _formula("A_g = b_w*h", title="Gross area", clause="8.6.4", basis=MECHANICS)
+AREA_RECTANGLE = _formula("A_g = b_w*h", title="Gross area", clause="geometry", basis=MECHANICS)
 CENTROID_RECTANGLE = _formula(
-    "y_b = h/2", title="Centroid above the bottom", clause="8.6.4", basis=MECHANICS
+    "y_b = h/2", title="Centroid above the bottom", clause="geometry", basis=MECHANICS
 )
 INERTIA_RECTANGLE = _formula(
     "I_g = b_w*h**3/12",
     title="Moment of inertia about the centroid",
-    clause="8.6.4",
+    clause="geometry",
     basis=MECHANICS,
 )
 CENTROID_TOP = _formula(
-    "y_t = h - y_b", title="Centroid below the top", clause="8.6.4", basis=MECHANICS
+    "y_t = h - y_b", title="Centroid below the top", clause="geometry", basis=MECHANICS
 )
 CRACKING_BOTTOM = _formula(
     "M_cr = f_r*I_g/y_b",
-    clause="8.6.4",
+    clause="9.8.2.3",
     title="Cracking moment, bottom in tension",
     basis=MECHANICS,
 )
 CRACKING_TOP = _formula(
     "M_crn = f_r*I_g/y_t",
-    clause="8.6.4",
+    clause="9.8.2.3",
     title="Cracking moment, top in tension",
     basis=MECHANICS,
 )

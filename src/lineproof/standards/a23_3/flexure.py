@@ -82,6 +82,15 @@ YIELDS = _criterion(
     no="The bars do NOT yield before the concrete crushes: less steel or a deeper section.",
     key="yield",
 )
+UPPER_LAYER_YIELDS = _criterion(
+    "c/d_2 <= c_d",
+    clause="10.5.2",
+    title="Yield of the upper layer of tension bars",
+    basis=FROM_MEMORY,
+    yes="The upper layer yields as well.",
+    no="The upper layer does NOT yield: less steel, or the bars in one layer.",
+    key="yield-upper",
+)
 
 M_R_FLANGE_FULL = _formula(
     "M_rf = alpha_1*phi_c*f_c*b*h_f*(d - h_f/2)",
@@ -154,4 +163,4 @@ FORMULAS = (
     BLOCK_REQUIRED_WEB,
     A_S_REQUIRED_WEB,
 )
-CRITERIA = (IN_FLANGE, STRENGTH, YIELDS, NEEDS_FLANGE_ONLY, ENOUGH_STEEL)
+CRITERIA = (IN_FLANGE, STRENGTH, YIELDS, UPPER_LAYER_YIELDS, NEEDS_FLANGE_ONLY, ENOUGH_STEEL)

@@ -246,7 +246,7 @@ def _closing(concrete: str, bars: str) -> Criterion:
     return _criterion(
         f"abs({concrete} - {bars}) <= 0.001*{_AT_YIELD}",
         unit="kN",
-        clause="10.1.2",
+        clause="10.1.1",
         title="Equilibrium of the section at the neutral axis found",
         basis=MECHANICS,
         key="equilibrium",

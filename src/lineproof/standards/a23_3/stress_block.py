@@ -61,7 +61,7 @@ C_BALANCED_TEE = _formula(
 )
 A_S_BALANCED = _formula(
     "A_sb = C_b/(phi_s*f_y)",
-    clause="10.1.2",
+    clause="10.1.1",
     title="Balanced reinforcement, by equilibrium",
     basis=MECHANICS,
 )

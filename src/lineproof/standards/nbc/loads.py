@@ -101,21 +101,21 @@ LIVE_IS_ENOUGH = _criterion(
 )
 MOMENT_SIMPLE = _formula(
     "M_f = w_f*l**2/8",
-    clause="9.2",
+    clause="statics",
     title="Factored moment at midspan, simple span",
     basis=MECHANICS,
 )
 SHEAR_SIMPLE = _formula(
     "V_f = w_f*l/2",
-    clause="9.2",
+    clause="statics",
     title="Factored shear at the centre of the support",
     basis=MECHANICS,
 )
 REACTION_DEAD = _formula(
-    "R_D = w_D*l/2", clause="9.2", title="Reaction, dead load, unfactored", basis=MECHANICS
+    "R_D = w_D*l/2", clause="statics", title="Reaction, dead load, unfactored", basis=MECHANICS
 )
 REACTION_LIVE = _formula(
-    "R_L = w_L*l/2", clause="9.2", title="Reaction, live load, unfactored", basis=MECHANICS
+    "R_L = w_L*l/2", clause="statics", title="Reaction, live load, unfactored", basis=MECHANICS
 )
 MOMENT_END_GIRDER = _formula(
     "M_f = w_f*l**2/24",

@@ -1,0 +1,227 @@
+"""Reading a CSV table from outside as plain text and numbers: nothing in it is ever computed.
+
+A header names the columns with their units, ``M (kN.m)``; values are converted to N and mm. All
+faults of a file are reported at once, with line and column.
+"""
+
+from __future__ import annotations
+
+import csv
+import re
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
+from pathlib import Path
+from typing import Literal
+
+from lineproof.errors import FaultList, UserError
+from lineproof.quantity import echo, internal_factor, unit_named
+
+Cell = str | float
+Kind = Literal["text", "number", "count"]
+
+MOST_BYTES = 20_000_000
+MOST_LINES = 200_000
+LONGEST_LINE = 1_000
+LONGEST_NAME = 80
+MOST_FAULTS = 40
+_NUMBER = re.compile(r"[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d{1,3})?", re.ASCII)
+_COUNT = re.compile(r"\d{1,4}", re.ASCII)
+_HEADER = re.compile(r"\s*(\w+)\s*(?:[(\[]([^()\[\]]{1,20})[)\]])?\s*", re.ASCII)
+_FORMULA = ("=", "+", "-", "@", "\t", "\r")
+"""What a spreadsheet would take for the start of a formula."""
+
+
+@dataclass(frozen=True, slots=True)
+class Column:
+    """A column: name, kind of cell, an example unit for numbers, largest size in N and mm."""
+
+    name: str
+    kind: Kind
+    unit: str = ""
+    most: float = 0.0
+    needed: bool = True
+
+
+@dataclass(frozen=True, slots=True)
+class Line:
+    """One row read: line number in the file and the cells in the order of the columns."""
+
+    number: int
+    cells: tuple[Cell, ...]
+
+
+class ManyFaults(FaultList):
+    """Faults of one file; after the first forty only their number is told."""
+
+    def __init__(self, name: str) -> None:
+        super().__init__()
+        self.name = name
+
+    def add(self, fault: str) -> None:
+        """Note one fault of the file."""
+        super().add(f"{self.name}: {fault}")
+
+    def raise_if_any(self) -> None:
+        """Raise the first faults and the number of the others."""
+        if len(self.faults) > MOST_FAULTS:
+            more = len(self.faults) - MOST_FAULTS
+            raise UserError([*self.faults[:MOST_FAULTS], f"{self.name}: and {more} faults more"])
+        super().raise_if_any()
+
+
+def read_table(source: Path | bytes, name: str, columns: Sequence[Column]) -> list[Line]:
+    """Return the rows of a CSV file; a column left out that is not needed reads as zero.
+
+    ``name`` stands for the file in messages. Raises :class:`UserError` with all faults.
+    """
+    faults = ManyFaults(name)
+    rows = _rows(_text(source, name), name)
+    header = next(rows, None)
+    if header is None:
+        raise UserError(f"{name}: the file is empty; write {_sample(columns)} on its first line")
+    places = _places(header[1], columns, faults)
+    faults.raise_if_any()
+    made = []
+    for number, cells in rows:
+        if len(cells) != len(header[1]):
+            faults.add(f"line {number}: {len(cells)} cells under {len(header[1])} headings")
+            continue
+        read = [_cell(cells, place, number, faults) for place in places]
+        made.append(Line(number, tuple(read)))
+    if not made and not faults.faults:
+        faults.add("no rows under the headings")
+    faults.raise_if_any()
+    return made
+
+
+def _text(source: Path | bytes, name: str) -> str:
+    if isinstance(source, Path):
+        if not source.is_file():
+            raise UserError(f"{name}: no such file")
+        with source.open("rb") as stream:
+            source = stream.read(MOST_BYTES + 1)
+    if len(source) > MOST_BYTES:
+        raise UserError(f"{name}: larger than {MOST_BYTES // 1_000_000} MB; export fewer cases")
+    try:
+        text = source.decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        raise UserError(
+            f"{name}: not UTF-8 at byte {error.start}; save it as 'CSV UTF-8'"
+        ) from None
+    if "\0" in text:
+        raise UserError(f"{name}: holds zero bytes; it is no text, save it as 'CSV UTF-8'")
+    return text
+
+
+def _rows(text: str, name: str) -> Iterator[tuple[int, list[str]]]:
+    """Yield line number and cells of every line that is not empty; refuse what is no table."""
+    lines = text.splitlines()
+    if len(lines) > MOST_LINES:
+        raise UserError(f"{name}: {len(lines)} lines, more than {MOST_LINES}; export fewer cases")
+    long = next((n for n, line in enumerate(lines, start=1) if len(line) > LONGEST_LINE), None)
+    if long is not None:
+        raise UserError(f"{name}: line {long} is longer than {LONGEST_LINE} characters; no table")
+    mark = ";" if lines and ";" in lines[0] else ","
+    for number, line in enumerate(lines, start=1):
+        try:
+            cells = next(csv.reader([line], delimiter=mark, strict=True), [])
+        except csv.Error:
+            raise UserError(f"{name}: line {number}: a quotation mark is not closed") from None
+        if any(cell.strip() for cell in cells):
+            yield number, cells
+
+
+def _sample(columns: Sequence[Column]) -> str:
+    words = [f"{c.name} ({c.unit})" if c.unit else c.name for c in columns if c.needed]
+    return repr(",".join(words))
+
+
+@dataclass(frozen=True, slots=True)
+class _Place:
+    """Where a column stands in the file (None: left out), and its factor into N and mm."""
+
+    column: Column
+    at: int | None
+    factor: float = 1.0
+
+
+def _places(header: Sequence[str], columns: Sequence[Column], faults: ManyFaults) -> list[_Place]:
+    found: dict[str, tuple[int, str]] = {}
+    known = {column.name.lower(): column for column in columns}
+    for at, cell in enumerate(header):
+        match = _HEADER.fullmatch(cell[:LONGEST_NAME])
+        word = match[1].lower() if match else ""
+        if word not in known:
+            faults.add(f"heading {echo(cell)} is not known; write {_sample(columns)}")
+        elif word in found:
+            faults.add(f"heading {echo(cell)} stands twice")
+        elif match:
+            found[word] = (at, match[2] or "")
+    places = []
+    for column in columns:
+        at, unit = found.get(column.name.lower(), (None, ""))
+        if at is None and column.needed:
+            faults.add(f"column {column.name!r} is missing; write {_sample(columns)}")
+        places.append(_Place(column, at, _factor(column, unit, faults) if at is not None else 1.0))
+    return places
+
+
+def _factor(column: Column, unit: str, faults: ManyFaults) -> float:
+    if not column.unit:
+        if unit:
+            faults.add(f"heading {column.name!r} takes no unit, but has {echo(unit)}")
+        return 1.0
+    wanted = unit_named(column.unit)
+    try:
+        found = unit_named(unit) if unit else None
+    except UserError as error:
+        faults.add(f"heading {column.name!r}: {error.faults[0]}")
+        return 1.0
+    if found is None or found.kind != wanted.kind:
+        what = "has no unit" if found is None else f"has {echo(unit)}, a unit of {found.kind}"
+        faults.add(f"heading {column.name!r} {what}; write '{column.name} ({column.unit})'")
+        return 1.0
+    return internal_factor(found.spelling)
+
+
+def _cell(cells: Sequence[str], place: _Place, number: int, faults: ManyFaults) -> Cell:
+    """Return one cell; where it is wrong, note the fault and return something harmless."""
+    column = place.column
+    if place.at is None:
+        return "" if column.kind == "text" else 0.0
+    cell = cells[place.at]
+    where = f"line {number}, {column.name}"
+    if column.kind == "text":
+        return _name(cell, where, faults)
+    text = cell.strip()
+    if not (_COUNT if column.kind == "count" else _NUMBER).fullmatch(text):
+        faults.add(f"{where}: {echo(cell)} {_what_is_wrong(text)}")
+        return 0.0
+    value = float(text) * place.factor
+    if column.most and not abs(value) <= column.most:
+        faults.add(f"{where}: {echo(cell)} is beyond anything a beam carries; look at the unit")
+        return 0.0
+    return value
+
+
+def _what_is_wrong(text: str) -> str:
+    if not text:
+        return "is empty; write a number"
+    if text.startswith("="):
+        return "is a formula; save the values, not the formulas"
+    if re.fullmatch(r"[+-]?[\d.]*,\d+", text):
+        return "has a decimal comma; write a decimal point"
+    return "is not a number; write it like -12.5"
+
+
+def _name(cell: str, where: str, faults: ManyFaults) -> str:
+    text = cell.strip()
+    if cell.startswith(_FORMULA) or text.startswith(_FORMULA):
+        faults.add(f"{where}: {echo(cell)} could run as a formula; begin the name with a letter")
+    elif not text:
+        faults.add(f"{where}: is empty; write a name")
+    elif len(text) > LONGEST_NAME or not text.isprintable():
+        faults.add(f"{where}: {echo(text)} is no name of up to {LONGEST_NAME} printed characters")
+    else:
+        return text
+    return "?"

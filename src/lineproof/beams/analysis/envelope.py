@@ -1,0 +1,238 @@
+"""Moments and shears of every case at stations along the beam, kept as pairs.
+
+Nothing is enveloped before it must be: M and V of every case stand side by side, so the general
+shear method can take the pair of one case, and every governing value says which case gave it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass
+from typing import Literal
+
+import numpy as np
+
+from lineproof.beams.analysis.arrangements import (
+    LIVE,
+    Arrangement,
+    Cases,
+    Combination,
+    LoadCase,
+    cases_of,
+)
+from lineproof.beams.analysis.curves import NEAR, Floats, Side
+from lineproof.beams.analysis.model import Beam
+from lineproof.beams.analysis.solve import Solution
+from lineproof.errors import FaultList
+
+Quantity = Literal["M", "V"]
+PIECES = 20
+"""Equal pieces a span is divided into, unless told otherwise."""
+
+
+@dataclass(frozen=True, slots=True)
+class Station:
+    """A station: span number, distance from its left end [mm], side of a jump, what lies there.
+
+    ``marks`` holds "support", "face", "d_v", "load" or nothing for a station between.
+    """
+
+    span: int
+    x: float
+    side: Side
+    marks: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Governing:
+    """A governing value with the place and the case that gave it, and the value beside it.
+
+    ``beside`` is V of the same case and place where the value is a moment, else M.
+    """
+
+    value: float
+    span: int
+    x: float
+    case: LoadCase
+    beside: float
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Envelope:
+    """M [N.mm] and V [N] of every case at every station: arrays (cases, stations)."""
+
+    stations: tuple[Station, ...]
+    cases: tuple[LoadCase, ...]
+    M: Floats
+    V: Floats
+
+    def pairs(self, station: int) -> tuple[tuple[LoadCase, float, float], ...]:
+        """Return case, M, V of every case at one station (its place in ``stations``)."""
+        columns = self.M[:, station].tolist(), self.V[:, station].tolist()
+        return tuple(zip(self.cases, *columns, strict=True))
+
+    def governing(self, what: Quantity, *, largest: bool) -> tuple[Governing, ...]:
+        """Return the largest or smallest M or V at every station with the case that gave it."""
+        values, other = (self.M, self.V) if what == "M" else (self.V, self.M)
+        rows = (values.argmax(axis=0) if largest else values.argmin(axis=0)).tolist()
+        return tuple(
+            Governing(float(values[row, i]), at.span, at.x, self.cases[row], float(other[row, i]))
+            for i, (at, row) in enumerate(zip(self.stations, rows, strict=True))
+        )
+
+    def marked(self, mark: str, span: int | None = None) -> tuple[int, ...]:
+        """Return the places in ``stations`` that carry a mark, of one span or of all."""
+        return tuple(
+            i
+            for i, station in enumerate(self.stations)
+            if mark in station.marks and span in (None, station.span)
+        )
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class CaseSolution:
+    """A solution whose rows are load cases, with their names."""
+
+    solution: Solution
+    cases: tuple[LoadCase, ...]
+
+
+def solve_cases(
+    solution: Solution, combinations: Iterable[Combination], arrangements: Iterable[Arrangement]
+) -> CaseSolution:
+    """Return the solution of every combination with every arrangement."""
+    cases: Cases = cases_of(solution.rows, combinations, arrangements)
+    return CaseSolution(solution.combined(cases.factors), cases.names)
+
+
+def stations_of(
+    solution: Solution, d_v: Sequence[float] | None = None, pieces: int = PIECES
+) -> tuple[Station, ...]:
+    """Return the stations of a beam: equal pieces, faces, d_v from the faces, loads, supports.
+
+    ``d_v`` holds one shear depth a span [mm]. At a load and at a support stand two stations, one a
+    side. Raises :class:`UserError` if d_v does not fit the clear length.
+    """
+    beam = solution.beam
+    _check_depths(beam, d_v, pieces)
+    made: list[Station] = []
+    for number in range(1, len(beam.spans) + 1):
+        depth = None if d_v is None else d_v[number - 1]
+        made += _of_span(beam, number, solution.span(number).breaks.tolist(), depth, pieces)
+    return tuple(made)
+
+
+def _check_depths(beam: Beam, d_v: Sequence[float] | None, pieces: int) -> None:
+    faults = FaultList()
+    if not 1 <= pieces <= 10_000:  # noqa: PLR2004 - more is a slip
+        faults.add(f"pieces: {pieces}; write 1 to 10000")
+    if d_v is not None and len(d_v) != len(beam.spans):
+        faults.add(f"d_v: {len(d_v)} given for {len(beam.spans)} spans; write one a span")
+    elif d_v is not None:
+        for number, depth in enumerate(d_v, start=1):
+            if not 0 < depth < beam.clear(number):
+                faults.add(
+                    f"d_v: {depth:g} mm in span {number}, whose clear length is "
+                    f"{beam.clear(number):g} mm; write a depth less than that"
+                )
+    faults.raise_if_any()
+
+
+def _of_span(
+    beam: Beam, number: int, breaks: Sequence[float], d_v: float | None, pieces: int
+) -> list[Station]:
+    length = beam.spans[number - 1].length
+    near = NEAR * length
+    marks: dict[float, set[str]] = {length * i / pieces: set() for i in range(pieces + 1)}
+
+    def mark(x: float, word: str) -> None:
+        at = next((known for known in marks if abs(known - x) <= near), x)
+        marks.setdefault(at, set()).add(word)
+
+    for x in breaks[1:-1]:
+        mark(x, "load")
+    start, end = beam.faces(number)
+    left, right = beam.supports[number - 1 : number + 1]
+    for support, axis, face, inward in ((left, 0.0, start, 1), (right, length, end, -1)):
+        if support.kind != "free":
+            mark(axis, "support")
+            mark(face, "face")
+            if d_v is not None:
+                mark(face + inward * d_v, "d_v")
+    stations = []
+    for x in sorted(marks):
+        words = tuple(sorted(marks[x]))
+        sides: tuple[Side, ...] = ("left", "right") if "load" in words else ("right",)
+        if x <= 0 or x >= length:
+            sides = ("right",) if x <= 0 else ("left",)
+        stations += [Station(number, x, side, words) for side in sides]
+    return stations
+
+
+def envelope(
+    solved: CaseSolution, d_v: Sequence[float] | None = None, pieces: int = PIECES
+) -> Envelope:
+    """Return M and V of every case at the stations of the beam."""
+    stations = stations_of(solved.solution, d_v, pieces)
+    M, V = np.zeros((2, len(solved.cases), len(stations)))
+    for number, curves in enumerate(solved.solution.spans, start=1):
+        here = np.array([i for i, s in enumerate(stations) if s.span == number])
+        x = np.array([stations[i].x for i in here])
+        left = np.array([stations[i].side == "left" for i in here])
+        M[:, here] = curves.moment(x)
+        V[:, here] = np.where(left, curves.shear(x, "left"), curves.shear(x, "right"))
+    return Envelope(stations, solved.cases, M, V)
+
+
+def span_moment(solved: CaseSolution, number: int, *, largest: bool = True) -> Governing:
+    """Return the largest or smallest moment of a span, at its exact station."""
+    curves = solved.solution.span(number)
+    found = curves.moment_extremes()
+    values, stations = (
+        (found.largest, found.x_largest) if largest else (found.smallest, found.x_smallest)
+    )
+    row = int(values.argmax() if largest else values.argmin())
+    x = float(stations[row])
+    V = float(curves.shear(np.array([x]))[row, 0])
+    return Governing(float(values[row]), number, x, solved.cases[row], V)
+
+
+@dataclass(frozen=True, slots=True)
+class Reaction:
+    """Unfactored reaction of one load type at one support [N], and the couple [N.mm].
+
+    ``everywhere`` has the load on all spans; ``largest`` and ``smallest`` have live load where it
+    is worst among the arrangements, and are the same as ``everywhere`` for other loads.
+    """
+
+    support: int
+    kind: str
+    everywhere: float
+    largest: float
+    smallest: float
+    couple: float
+
+
+def unfactored_reactions(
+    solution: Solution, arrangements: Iterable[Arrangement]
+) -> tuple[Reaction, ...]:
+    """Return the reactions of every support by load type, for whoever designs what carries it."""
+    placed = tuple(arrangements)
+    kinds = tuple(dict.fromkeys(kind for kind, _ in solution.rows))
+    made = []
+    for kind in kinds:
+        where: list[Mapping[int, bool]] = [{}]
+        if kind in LIVE:
+            where += [{s: s in a.spans for s in range(1, len(solution.spans) + 1)} for a in placed]
+        factors = [[float(k == kind and on.get(s, True)) for k, s in solution.rows] for on in where]
+        cases = np.array(factors)
+        R, couples = cases @ solution.reactions, cases[0] @ solution.couples
+        made += [
+            Reaction(
+                i + 1, kind, float(R[0, i]), float(R[:, i].max()), float(R[:, i].min()),
+                float(couples[i]),
+            )
+            for i, support in enumerate(solution.beam.supports)
+            if support.kind != "free"
+        ]  # fmt: skip
+    return tuple(made)
