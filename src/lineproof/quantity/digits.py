@@ -121,9 +121,8 @@ def choose_digits(
 ) -> Chosen:
     """Choose the fewest digits so that the printed arguments give the printed result.
 
-    Each number starts short. While the function of the printed arguments misses the printed
-    result by more than one unit of its last digit, the argument whose rounding moves the result
-    most gains a digit, to six at most; only when none is left does the result give one up. A
+    Each number starts short. While the function of the printed arguments does not round to the
+    printed result, the argument whose rounding moves the result most gains a digit, to six at most; only when none is left does the result give one up. A
     result that is nothing but the difference of roundings prints as 0.00; only where even that
     misses, or where the result must show ``needed`` digits, do arguments go beyond six.
     ``decimals`` asks for a result to so many decimals instead of significant digits;
@@ -157,7 +156,7 @@ def _agrees(
 ) -> bool:
     shown = float(significant(result, digits))
     missed = abs(_call(function, printed) - shown)
-    return missed <= last_unit(result, digits) * (1 + 1e-9)
+    return missed <= last_unit(result, digits) / 2 * (1 + 1e-9)
 
 
 def _call(function: Callable[..., float], args: Sequence[float]) -> float:

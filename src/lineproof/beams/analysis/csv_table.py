@@ -159,10 +159,13 @@ def _places(header: Sequence[str], columns: Sequence[Column], faults: ManyFaults
             found[word] = (at, match[2] or "")
     places = []
     for column in columns:
-        at, unit = found.get(column.name.lower(), (None, ""))
-        if at is None and column.needed:
+        place = found.get(column.name.lower())
+        if place is not None:
+            places.append(_Place(column, place[0], _factor(column, place[1], faults)))
+            continue
+        places.append(_Place(column, None))
+        if column.needed:
             faults.add(f"column {column.name!r} is missing; write {_sample(columns)}")
-        places.append(_Place(column, at, _factor(column, unit, faults) if at is not None else 1.0))
     return places
 
 

@@ -142,31 +142,39 @@ def _of_span(
     beam: Beam, number: int, breaks: Sequence[float], d_v: float | None, pieces: int
 ) -> list[Station]:
     length = beam.spans[number - 1].length
-    near = NEAR * length
-    marks: dict[float, set[str]] = {length * i / pieces: set() for i in range(pieces + 1)}
-
-    def mark(x: float, word: str) -> None:
-        at = next((known for known in marks if abs(known - x) <= near), x)
-        marks.setdefault(at, set()).add(word)
-
-    for x in breaks[1:-1]:
-        mark(x, "load")
-    start, end = beam.faces(number)
+    marked = [(length * i / pieces, "") for i in range(pieces + 1)]
+    marked += [(x, "load") for x in breaks[1:-1]]
     left, right = beam.supports[number - 1 : number + 1]
+    start, end = beam.faces(number)
     for support, axis, face, inward in ((left, 0.0, start, 1), (right, length, end, -1)):
         if support.kind != "free":
-            mark(axis, "support")
-            mark(face, "face")
-            if d_v is not None:
-                mark(face + inward * d_v, "d_v")
+            marked += [(axis, "support"), (face, "face")]
+            marked += [] if d_v is None else [(face + inward * d_v, "d_v")]
     stations = []
-    for x in sorted(marks):
-        words = tuple(sorted(marks[x]))
+    for x, words in _merged(marked, NEAR * length):
         sides: tuple[Side, ...] = ("left", "right") if "load" in words else ("right",)
-        if x <= 0 or x >= length:
-            sides = ("right",) if x <= 0 else ("left",)
+        if x in (0.0, length):
+            sides = ("left" if x else "right",)
         stations += [Station(number, x, side, words) for side in sides]
     return stations
+
+
+def _merged(
+    marked: Sequence[tuple[float, str]], near: float
+) -> list[tuple[float, tuple[str, ...]]]:
+    """Return the stations in order with all that lies at each; the place of a mark is kept."""
+    groups: list[list[tuple[float, str]]] = []
+    for x, word in sorted(marked):
+        if groups and x - groups[-1][0][0] <= near:
+            groups[-1].append((x, word))
+        else:
+            groups.append([(x, word)])
+    merged = []
+    for group in groups:
+        words = tuple(dict.fromkeys(word for _, word in group if word))
+        x = next((x for x, word in group if word in {"support", "load"}), group[0][0])
+        merged.append((x, words))
+    return merged
 
 
 def envelope(
@@ -175,12 +183,14 @@ def envelope(
     """Return M and V of every case at the stations of the beam."""
     stations = stations_of(solved.solution, d_v, pieces)
     M, V = np.zeros((2, len(solved.cases), len(stations)))
+    x = np.array([station.x for station in stations])
+    left = np.array([station.side == "left" for station in stations])
+    span = np.array([station.span for station in stations])
     for number, curves in enumerate(solved.solution.spans, start=1):
-        here = np.array([i for i, s in enumerate(stations) if s.span == number])
-        x = np.array([stations[i].x for i in here])
-        left = np.array([stations[i].side == "left" for i in here])
-        M[:, here] = curves.moment(x)
-        V[:, here] = np.where(left, curves.shear(x, "left"), curves.shear(x, "right"))
+        here = slice(*np.searchsorted(span, [number, number + 1]))
+        M[:, here] = curves.moment(x[here])
+        both = curves.shear(x[here], "left"), curves.shear(x[here], "right")
+        V[:, here] = np.where(left[here], *both)
     return Envelope(stations, solved.cases, M, V)
 
 

@@ -13,6 +13,7 @@ the load is uniform; a reaction is the jump of V over its support.
 
 from __future__ import annotations
 
+import math
 from collections import defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
@@ -223,33 +224,39 @@ def read_reactions(
 ) -> Mapping[LoadCase, tuple[float, ...]]:
     """Return reactions [N] by load case, one a support, in the order of the supports.
 
-    Each must be the jump of V over its support; raises :class:`UserError` with all faults.
+    Each must be the jump of V over its support; a free end needs none. Raises
+    :class:`UserError` with all faults.
     """
     faults = ManyFaults(name)
+    found = _by_support(read_table(source, name, REACTIONS), faults)
+    jumps = dict(_jumps(forces.envelope))
+    for case, support in found.keys() - jumps.keys():
+        faults.add(f"{case}, support {support}: no such case or support in the forces")
+    largest: dict[LoadCase, float] = defaultdict(float)
+    for (case, _), jump in jumps.items():
+        largest[case] = max(largest[case], abs(jump))
+    for (case, support), jump in jumps.items():
+        slack = tolerance * largest[case]
+        R = found.setdefault((case, support), 0.0 if abs(jump) <= slack else math.nan)
+        if math.isnan(R):
+            faults.add(f"{case}, support {support}: no reaction")
+        elif abs(R - jump) > slack:
+            what = f"reaction {R / 1e3:g} kN, but V jumps by {jump / 1e3:g} kN"
+            faults.add(f"{case}, support {support}: {what}")
+    faults.raise_if_any()
+    supports = range(1, 2 + max(s.span for s in forces.envelope.stations))
+    return {c: tuple(found[c, s] for s in supports) for c in forces.envelope.cases}
+
+
+def _by_support(lines: Sequence[Line], faults: ManyFaults) -> dict[tuple[LoadCase, int], float]:
     found: dict[tuple[LoadCase, int], float] = {}
-    for line in read_table(source, name, REACTIONS):
+    for line in lines:
         support, case, combination, R = line.cells
         key = LoadCase(str(combination), str(case)), int(support)
         if key in found:
             faults.add(f"line {line.number}: {key[0]}, support {key[1]} stands twice")
         found[key] = float(R)
-    jumps = dict(_jumps(forces.envelope))
-    for case, support in found.keys() - jumps.keys():
-        faults.add(f"{case}, support {support}: no such case or support in the forces")
-    for case, support in jumps:
-        if (case, support) not in found:
-            faults.add(f"{case}, support {support}: no reaction")
-    largest = {c: max(abs(j) for (k, _), j in jumps.items() if k == c) for c, _ in jumps}
-    for (case, support), jump in jumps.items():
-        R = found.get((case, support), jump)
-        if abs(R - jump) > tolerance * largest[case]:
-            faults.add(
-                f"{case}, support {support}: reaction {R / 1e3:g} kN, but V jumps by "
-                f"{jump / 1e3:g} kN"
-            )
-    faults.raise_if_any()
-    supports = range(1, 2 + max(s.span for s in forces.envelope.stations))
-    return {c: tuple(found[c, s] for s in supports) for c in forces.envelope.cases}
+    return found
 
 
 def _jumps(envelope: Envelope) -> Iterator[tuple[tuple[LoadCase, int], float]]:

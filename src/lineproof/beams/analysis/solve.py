@@ -92,8 +92,9 @@ def solve(beam: Beam, loads: Iterable[Load]) -> Solution:
     kept = check_loads(beam, loads)
     rows = tuple(dict.fromkeys((load.kind, load.span) for load in kept))
     placed = [_placed(beam, number, kept, rows) for number in range(1, len(beam.spans) + 1)]
-    rotations = _rotations(beam, placed, len(rows))
-    ends = _end_moments(beam, placed, rotations)
+    held = [_fixed_end(curves) for curves in placed]
+    rotations = _rotations(beam, placed, held)
+    ends = _end_moments(beam, placed, held, rotations)
     _tidy(beam, ends)
     spans = tuple(
         _curves(beam, number, curves, ends[number], rotations)
@@ -131,7 +132,11 @@ def _edges(load: Load, length: float) -> tuple[float, ...]:
     return (0.0, length)
 
 
-def _fixed_end(curves: Curves) -> tuple[Floats, Floats]:
+Held = tuple[Floats, Floats]
+"""Moments at the ends of a span with its ends held, one entry a row."""
+
+
+def _fixed_end(curves: Curves) -> Held:
     """Return M at both ends of the span with its ends held: left and right, hogging negative.
 
     A point load gives -P a b^2/l^2 and -P a^2 b/l^2. Along a uniform load that is a cubic, which
@@ -151,9 +156,9 @@ def _fixed_end(curves: Curves) -> tuple[Floats, Floats]:
     return left, right
 
 
-def _rotations(beam: Beam, placed: Sequence[Curves], rows: int) -> Floats:
+def _rotations(beam: Beam, placed: Sequence[Curves], held: Sequence[Held]) -> Floats:
     """Return the rotation at every support (rows, supports); zero where fixed, and at free ends."""
-    count = len(beam.supports)
+    count, rows = len(beam.supports), len(held[0][0])
     K, out_of_balance = np.zeros((count, count)), np.zeros((rows, count))
     for i, curves in enumerate(placed):
         k = curves.EI / curves.length
@@ -163,7 +168,7 @@ def _rotations(beam: Beam, placed: Sequence[Curves], rows: int) -> Floats:
             out_of_balance[:, i] += curves.load_moment(about=0.0)
         else:
             K[i : i + 2, i : i + 2] += k * np.array([[4.0, 2.0], [2.0, 4.0]])
-            left, right = _fixed_end(curves)
+            left, right = held[i]
             out_of_balance[:, i] -= left
             out_of_balance[:, i + 1] += right
     K += np.diag([support.stiffness for support in beam.supports])
@@ -175,7 +180,9 @@ def _rotations(beam: Beam, placed: Sequence[Curves], rows: int) -> Floats:
     return rotations
 
 
-def _end_moments(beam: Beam, placed: Sequence[Curves], rotations: Floats) -> list[list[Floats]]:
+def _end_moments(
+    beam: Beam, placed: Sequence[Curves], held: Sequence[Held], rotations: Floats
+) -> list[list[Floats]]:
     """Return M at both ends of every span."""
     ends = []
     for i, curves in enumerate(placed):
@@ -185,7 +192,7 @@ def _end_moments(beam: Beam, placed: Sequence[Curves], rotations: Floats) -> lis
         elif beam.supports[i + 1].kind == "free":
             ends.append([-curves.load_moment(about=0.0), none])
         else:
-            k, (left, right) = curves.EI / curves.length, _fixed_end(curves)
+            k, (left, right) = curves.EI / curves.length, held[i]
             near, far = rotations[:, i], rotations[:, i + 1]
             ends.append([left + k * (4 * near + 2 * far), right - k * (2 * near + 4 * far)])
     return ends
