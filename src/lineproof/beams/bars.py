@@ -34,6 +34,14 @@ class BarLayer:
         return f"{self.number}-{self.size}"
 
 
+def in_line(first: int, second: int) -> bool:
+    """Tell whether bars of a second layer can stand in line with those of the first.
+
+    They stand over the outer bars, the same number at each side, and one over the middle bar.
+    """
+    return second <= first and (second % 2 == 0 or first % 2 == 1)
+
+
 BarLayers = tuple[BarLayer, ...]
 """Layers from the tension face inward."""
 
@@ -54,10 +62,10 @@ def read_bars(name: str, text: object) -> BarLayers:
         raise UserError(
             f"{name}: {echo(text)} has {len(layers)} layers; write at most {MOST_LAYERS}"
         )
-    if layers[-1].number > layers[0].number:
+    if not in_line(layers[0].number, layers[-1].number):
         raise UserError(
-            f"{name}: {echo(text)} has more bars in the second layer than in the first, so they "
-            f"cannot stand in line; write for example '{layers[0]} / {layers[0]}'"
+            f"{name}: {echo(text)}: the bars of the second layer cannot stand in line with the "
+            f"first; write for example '{layers[0]} / 2-{layers[-1].size}'"
         )
     return layers
 

@@ -10,6 +10,7 @@ from lineproof.formula import Criterion
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, cover, materials, stress_block
 from lineproof.standards.codes import CodePair
+from lineproof.standards.nbc import loads
 
 GIVEN = "given"
 MATERIALS = "materials"
@@ -21,7 +22,10 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
     with sheet.part(GIVEN, "Given"):
         sheet.given("l", inputs.span)
         sheet.given("s_b", inputs.spacing)
-        sheet.given("b_tr", inputs.tributary_width)
+        if inputs.tributary_width is None:
+            sheet.line(loads.TRIBUTARY)
+        else:
+            sheet.given("b_tr", inputs.tributary_width)
         sheet.given("b_w", inputs.b_w)
         sheet.given("h", inputs.h)
         if inputs.h_f is not None:
@@ -29,6 +33,8 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
         sheet.given("f_c", inputs.f_c)
         sheet.given("gamma_c", inputs.gamma_c)
         sheet.given("q_SD", inputs.superimposed)
+        if inputs.floor_weight is not None:
+            sheet.given("q_fl", inputs.floor_weight)
         sheet.given("c_c", inputs.cover)
         sheet.given("a_max", inputs.aggregate)
         sheet.note(
@@ -61,12 +67,12 @@ def record_materials(sheet: Sheet, density: str, grade: str, pair: CodePair) -> 
 
 def _record_change(sheet: Sheet, pair: CodePair, clause: str, what: str) -> None:
     """Record that an edition's text of a clause is not known here, and what is used instead."""
-    code = pair.building if clause.startswith("4.") else pair.concrete
+    code = pair.building if clause.startswith("NBC") else pair.concrete
     used = "the rule known before is used until the office confirms this one in its own copy."
     if clause == YIELD_CLAUSE and confirmed_value(sheet.project, pair) is not None:
         used = "the value that the office confirmed in its own copy is used."
     sheet.note(
-        f"changed-{clause.replace('.', '-')}",
+        f"changed-{clause.replace('.', '-').replace(' ', '-')}",
         f"Clause {clause}: {what}. Its text in {code} is not known here: {used}",
         title=f"Clause {clause} of {code}",
         clause=clause,

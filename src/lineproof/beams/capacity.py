@@ -28,7 +28,7 @@ def curve(sheet: Sheet, shape: Shape) -> list[tuple[float, float]]:
     """Return pairs (A_s / A_s,b, M_r [N.mm]) from nothing to the balanced steel."""
     place = midspan(sheet, shape).place
     values = {n: sheet.find(n).value for n in _MATERIALS}
-    values |= {n: place[n].value for n in ("b", "b_w", "h_f", "d")}
+    values |= {n: place[n].value for n in ("b", "b_w", "h_f", "d") if n in place}
     balanced = sheet.entry("balanced/A_sb").value
     ratios = [i / _POINTS for i in range(_POINTS + 1)]
     return [(r, _resistance(values | {"A_s": r * balanced}, shape)) for r in ratios]
@@ -93,11 +93,11 @@ def record_capacity(
 
 
 def _record_table(sheet: Sheet, shares: list[tuple[Entry, Entry, Entry]]) -> None:
-    columns = ["Share of A_s,b, %", "A_s, mm²", "a, mm", "M_r, kN·m"]
+    columns = ["Share, %", "A_s, mm2", "Depth of block, mm", "M_r, kN.m"]
     rows = [
         [
             str(share),
-            in_unit(A_s.value, "mm2", 4),
+            in_unit(A_s.value, "mm2", 3),
             in_unit(a.value, "mm", 3),
             in_unit(M_r.value, "kN.m", 3),
         ]

@@ -1,7 +1,7 @@
 """Choosing bars: candidates in the stated order, each tried on the very calculation to be printed.
 
-The order is few sizes, then least mass, then few layers, then thin bars (cracks). Sizes that a
-yard stocks for beams are tried: 15M to 35M (common practice).
+The order is few sizes, one layer before two (it is easier to build), then least mass, then thin
+bars (cracks). Sizes that a yard stocks for beams are tried: 15M to 35M (common practice).
 """
 
 from __future__ import annotations
@@ -10,7 +10,7 @@ from collections import Counter
 from collections.abc import Callable, Iterable, Iterator
 from typing import TypeVar
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers, in_line
 from lineproof.errors import UserError
 from lineproof.record import Part
 from lineproof.record.entry import CHECK
@@ -33,15 +33,15 @@ def bottom_candidates() -> list[BarLayers]:
             for n in range(2, MOST_BARS + 1)
             for upper in SIZES
             for m in range(2, n + 1)
-            if BARS.number(upper, "d_b") <= BARS.number(size, "d_b")
+            if in_line(n, m) and BARS.number(upper, "d_b") <= BARS.number(size, "d_b")
         ]
     return sorted(found, key=_order)
 
 
-def _order(layers: BarLayers) -> tuple[int, float, int, int]:
+def _order(layers: BarLayers) -> tuple[int, int, float, int]:
     sizes = {layer.size for layer in layers}
     area = sum(layer.area for layer in layers)
-    return len(sizes), area, len(layers), -sum(layer.number for layer in layers)
+    return len(sizes), len(layers), area, -sum(layer.number for layer in layers)
 
 
 def top_candidates(spread_area: float, sides: int) -> Iterator[tuple[BarLayer, int]]:
@@ -91,7 +91,7 @@ def first_that_holds(
     stopped = "; ".join(f"{why} ({count} layouts)" for why, count in reasons.most_common(3))
     raise UserError(
         f"{what}: no bars pass every check; stopped by: {stopped or 'the moment'}; "
-        "write a deeper or wider beam"
+        "change the inputs that these rest on, such as h, b_w, h_f or cover"
     )
 
 

@@ -88,10 +88,11 @@ def required(steps: Steps, shape: Shape) -> None:
 def _refuse_overload(steps: Steps, shape: Shape) -> None:
     """Refuse a moment that even a block down to the bars does not balance."""
     find = steps.sheet.find
-    b, b_w, h_f, d, M_f = (steps.place[n].value for n in ("b", "b_w", "h_f", "d", "M_f"))
+    b, b_w, d, M_f = (steps.place[n].value for n in ("b", "b_w", "d", "M_f"))
     stress = find("alpha_1").value * find("phi_c").value * find("f_c").value
     most = stress * b_w * d * d / 2
     if shape != "rectangular":
+        h_f = steps.place["h_f"].value
         most += stress * (b - b_w) * h_f * (d - h_f / 2)
     if M_f >= most:
         raise UserError(
@@ -191,7 +192,7 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
     in_flange = shape == "rectangular" or bool(steps.decide(double.STAYS_IN_FLANGE))
     closing = double.CLOSES if in_flange else double.CLOSES_TEE
     steps.found(
-        "c", strain.AXIS["compression bars"], closing, unit="mm", clause="10.1.1",
+        "c", strain.AXIS["rectangle" if shape == "rectangular" else "tee", "compression bars"], closing, unit="mm", clause="10.1.1",
         title="Depth of the neutral axis, by equilibrium",
     )  # fmt: skip
     steps.lines(double.STRESS, double.FORCE, double.BLOCK)

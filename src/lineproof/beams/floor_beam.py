@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from typing import Any
 
 from lineproof.beams import basics, choice, loading
@@ -36,14 +37,15 @@ from lineproof.standards.codes import CodePair
 COMPRESSION_BARS = "compression-bars"
 SCOPE = "preliminary: flexure only"
 NOT_COVERED = (
-    {"check": "Concentrated live loads", "clause": "4.1.5.9"},
+    {"check": "Concentrated live loads", "clause": "NBC 4.1.5.9"},
     {"check": "Shear and stirrups", "clause": "11.3"},
     {"check": "Torsion", "clause": "11.3.10"},
     {"check": "Deflection", "clause": "9.8"},
     {"check": "Development, cut-off and laps of bars", "clause": "12"},
     {"check": "Bearing at the supports", "clause": "10.8"},
-    {"check": "Shear between flange and web", "clause": "11.5"},
-    {"check": "Crack control of the top bars at the ends", "clause": "10.6.1"},
+    {"check": "Hanger stirrups where a girder carries the beam", "clause": "11.2.12"},
+    {"check": "Structural integrity", "clause": "NBC 4.1.1.3"},
+    {"check": "Vibration of the floor", "clause": "NBC 4.1.3.6"},
 )
 _CALLS = {
     basics.GIVEN: "floor_beam(...)",
@@ -120,12 +122,12 @@ class FloorBeam:
     def _record_compression_bars(self, sheet: Sheet, layer: BarLayer) -> None:
         with sheet.part(COMPRESSION_BARS, "Compression bars, counted at midspan"):
             steps = Steps(sheet, {n: sheet.entry(f"{BARS}/{n}") for n in ("d_bs", "r_s")})
-            n_1 = sheet.given("n_1", str(layer.number), "number of compression bars")
+            n_c = sheet.given("n_c", str(layer.number), source="given")
             steps.bind(
                 d_b=sheet.lookup("d_b", bar_clause.BARS, layer.size),
                 A_b=sheet.lookup("A_b", bar_clause.BARS, layer.size),
-                n_1=n_1,
-                n_b=n_1,
+                n_c=n_c,
+                n_b=n_c,
             )
             steps.lines(bar_clause.LEAST_CLEAR, bar_clause.CLEAR)
             steps.check(bar_clause.FITS)
@@ -261,6 +263,7 @@ def floor_beam(
     shape: str = "T",
     tributary_width: QuantityInput | None = None,
     live_load: QuantityInput | None = None,
+    floor_weight: QuantityInput | None = None,
     density: str = "normal",
     gamma_c: QuantityInput = "2400 kg/m3",
     aggregate: QuantityInput = "20 mm",
@@ -271,6 +274,7 @@ def floor_beam(
     compression_bars: str | None = None,
     top_bars: str | None = None,
     minimum_rule: str = "10.5.1.2",
+    waive_minimum_at_ends: bool = False,
     web_openings: str = "none",
 ) -> FloorBeam:
     """Start a simply supported floor beam: check all inputs, record them and the materials.
@@ -288,12 +292,24 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, pair: CodePair) -> FloorBeam:
     prepare(sheet, pair)
     sheet.member = f"floor beam, one simple span, {inputs.shape} section"
     sheet.scope = SCOPE
-    sheet.not_covered = [dict(row) for row in NOT_COVERED]
+    sheet.not_covered = not_covered(inputs)
     left_out = (COMPRESSION_BARS,) if inputs.compression_bars is None else _SINGLY
     sheet.expect({key: call for key, call in _CALLS.items() if key not in left_out})
     basics.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair)
     return FloorBeam(sheet, inputs, pair)
+
+
+def not_covered(inputs: FloorBeamInputs) -> list[Mapping[str, str]]:
+    """Return the checks of a complete calc that this one does not hold."""
+    rows: list[Mapping[str, str]] = [dict(row) for row in NOT_COVERED]
+    if inputs.slab:
+        rows.append({"check": "Shear between flange and web", "clause": "11.5"})
+    else:
+        rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
+    if inputs.ends != "free":
+        rows.append({"check": "Crack control of the top bars at the ends", "clause": "10.6.1"})
+    return rows
 
 
 def prepare(sheet: Sheet, pair: CodePair) -> None:

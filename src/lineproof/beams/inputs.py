@@ -47,6 +47,7 @@ RANGES: Mapping[str, Range] = {
     "f_c": Range("MPa", LEAST_F_C, MOST_F_C),
     "gamma_c": Range("kg/m3", 1500, 2500),
     "superimposed": Range("kPa", 0, 100, zero=True),
+    "floor_weight": Range("kPa", 0, 100, zero=True),
     "live_load": Range("kPa", 0.1, 100),
     "cover": Range("mm", 10, 200),
     "aggregate": Range("mm", 5, 40),
@@ -59,6 +60,9 @@ _OUTSIDE = {"f_c": " (A23.3, 8.6.1.1)"}
 def read_input(name: str, given: QuantityInput) -> Typed:
     """Read one quantity of :data:`RANGES`; raises :class:`UserError` that names the input."""
     allowed = RANGES[name]
+    if given is None:
+        sample = f"{_plain(allowed.high / 4)} {allowed.unit}"
+        raise UserError(f"{name}: is missing; write for example '{sample}'")
     typed = read_quantity(name, given, allowed.unit)
     value = typed.value
     low, high = (x * internal_factor(allowed.unit) for x in (allowed.low, allowed.high))
@@ -102,7 +106,7 @@ class FloorBeamInputs:
     shape: Shape
     span: Typed
     spacing: Typed
-    tributary_width: Typed
+    tributary_width: Typed | None
     b_w: Typed
     h: Typed
     h_f: Typed | None
@@ -111,6 +115,7 @@ class FloorBeamInputs:
     density: str
     grade: str
     superimposed: Typed
+    floor_weight: Typed | None
     use: str
     live_load: Typed | None
     exposure: str
@@ -124,6 +129,7 @@ class FloorBeamInputs:
     top_bars: BarLayers | None
     ends: str
     minimum_rule: str
+    waive_minimum_at_ends: bool
 
     @property
     def slab(self) -> bool:
@@ -184,7 +190,7 @@ def read_floor_beam(
         },
         **{
             name: reader.take_if_given(name, read_input)
-            for name in ("h_f", "live_load", "tributary_width")
+            for name in ("h_f", "live_load", "tributary_width", "floor_weight")
         },
         "density": take("density", row_of, DENSITY_FACTORS),
         "grade": take("grade", row_of, GRADES),
@@ -200,6 +206,7 @@ def read_floor_beam(
         },
         "ends": take("ends", one_of, ENDS),
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
+        "waive_minimum_at_ends": take("waive_minimum_at_ends", _yes_or_no),
     }  # fmt: skip
     take("web_openings", _no_openings)
     _check_density(fields, given, reader.faults)
@@ -207,8 +214,6 @@ def read_floor_beam(
     reader.smaller("h_f", "h", fields)
     _check_geometry(fields, given, reader.faults)
     reader.faults.raise_if_any()
-    if fields["tributary_width"] is None:
-        fields["tributary_width"] = fields["spacing"]
     return FloorBeamInputs(**fields), pair
 
 
@@ -232,6 +237,12 @@ def _use_inside(name: str, given: object) -> str:
     return row_of(name, given, USES)
 
 
+def _yes_or_no(name: str, given: object) -> bool:
+    if not isinstance(given, bool):
+        raise UserError(f"{name}: {echo(given)} is not a choice; write True or False")
+    return given
+
+
 def _no_openings(name: str, given: object) -> None:
     if given not in (None, "none", "", 0, False):
         raise UserError(
@@ -244,6 +255,13 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
     shape, h_f = fields["shape"], fields["h_f"]
     if shape in ("T", "L") and given["h_f"] is None:
         faults.add(f"h_f: a beam of shape {shape!r} needs its slab; write '140 mm'")
+    if (shape == "rectangular") == (given["floor_weight"] is None):
+        faults.add(
+            "floor_weight: a rectangular beam needs the weight of the floor it carries; write "
+            "'3.4 kPa', or '0 kPa' if it carries none"
+            if shape == "rectangular"
+            else "floor_weight: the slab of a T or an L is counted from h_f; write None"
+        )
     if shape == "rectangular" and given["h_f"] is not None:
         faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
     if shape == "L" and given["tributary_width"] is None:

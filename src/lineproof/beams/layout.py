@@ -17,7 +17,7 @@ def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) 
     ``chosen`` tells whether the bars were proposed here or given by the designer. Whether they
     fit is the last check of each layer.
     """
-    origin = "chosen: fewest sizes, then least mass" if chosen else "given"
+    origin = "chosen: few sizes, one layer before two, then least mass" if chosen else "given"
     with sheet.part(BARS, "Bottom bars and effective depth"):
         sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.", title="Bars")
         first = layers[0]
@@ -46,7 +46,7 @@ def _record_second_layer(
     thicker = d_b2 if second.diameter > layers[0].diameter else first[0]
     least = sheet.line(bars.LEAST_CLEAR, symbol="s_min2", d_b=d_b2)
     clear = sheet.line(bars.CLEAR, symbol="s_c2", n_b=n_2, d_b=d_b2)
-    sheet.check(bars.FITS, key="bars-fit-2", s_min=least, s_c=clear)
+    sheet.check(bars.FITS_SECOND, s_min2=least, s_c2=clear)
     sheet.line(bars.LAYER_DISTANCE, d_b=thicker)
     sheet.line(bars.DEPTH_SECOND)
     sheet.line(bars.AREA_OF_BARS, symbol="A_s2", n_b=n_2, A_b=A_b2)

@@ -26,21 +26,13 @@ def record_loads(sheet: Sheet, inputs: FloorBeamInputs, *, figure: bool = True) 
         V_f = sheet.line(loads.SHEAR_SIMPLE)
         sheet.line(loads.REACTION_DEAD)
         sheet.line(loads.REACTION_LIVE)
-        if not inputs.slab:
-            sheet.note(
-                "floor-weight",
-                "Only the beam's own weight is computed: the weight of the floor that it carries "
-                "is part of the superimposed dead load given.",
-                title="Weight of the floor",
-                clause="4.1.4.1",
-            )
         sheet.note(
             "load-notes",
             "The live load is not reduced for tributary area. Companion snow, wind and earthquake "
-            "loads are zero for this beam; dead load does not counteract, so 0.9 D does not "
-            "govern.",
+            "loads are zero for this beam; dead load does not counteract, so its factor 0.9 does "
+            "not govern.",
             title="Not taken",
-            clause="4.1.5.8",
+            clause="NBC 4.1.5.8",
         )
         if figure:
             _record_figure(sheet, [*dead, live], w_f, M_f, V_f)
@@ -51,7 +43,7 @@ def _record_dead(sheet: Sheet, inputs: FloorBeamInputs) -> list[Entry]:
         made = [sheet.line(loads.SLAB), sheet.line(loads.WEB), sheet.line(loads.SUPERIMPOSED)]
         sheet.line(loads.DEAD_WITH_SLAB)
     else:
-        made = [sheet.line(loads.BEAM), sheet.line(loads.SUPERIMPOSED)]
+        made = [sheet.line(f) for f in (loads.BEAM, loads.FLOOR, loads.SUPERIMPOSED)]
         sheet.line(loads.DEAD_BEAM)
     return made
 
@@ -70,6 +62,7 @@ _NAMES = {
     "w_sl": "slab",
     "w_wb": "web below slab",
     "w_bm": "beam",
+    "w_fl": "floor carried",
     "w_SD": "superimposed dead",
     "w_L": "live",
 }
@@ -95,7 +88,7 @@ def _record_figure(sheet: Sheet, parts: list[Entry], w_f: Entry, M_f: Entry, V_f
             ("f", "sub"),
             (f" = {in_unit(M_f.value, 'kN.m', 3)} kN·m", "roman"),
         ),
-        caption="Loads on the span, unfactored, and factored moment",
+        caption="Loads unfactored; reactions and moment factored; restraint of the ends not shown",
     )
     sheet.figure(
         "loading", to_json(figure), title=figure.caption, alt=figure.alt,

@@ -17,15 +17,24 @@ def record_minimum(sheet: Sheet, shape: Shape, rule: str) -> None:
     steps = midspan(sheet, shape)
     steps.bind(M_f=sheet.entry("loads/M_f"), M_r=sheet.entry("flexure/M_r"))
     with sheet.part(MINIMUM, "Minimum reinforcement at midspan"):
-        minimum_of(steps, rule, minimum.BY_CRACKING, minimum.WIDTH_WEB)
+        minimum_of(steps, rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True)
 
 
-def minimum_of(steps: Steps, rule: str, by_cracking: Criterion, width: Formula) -> None:
-    """Record inside the open part the waiver, or else the rule that the calc uses."""
-    if steps.decide(minimum.WAIVER):
-        return
+def minimum_of(
+    steps: Steps, rule: str, by_cracking: Criterion, width: Formula, *, waivable: bool
+) -> None:
+    """Record inside the open part the rule that the calc uses as a check.
+
+    Where it is not met and may be waived, that is recorded as a decision, and the check is the
+    waiver of 10.5.1.3. One check stands in any case.
+    """
     if rule == "10.5.1.1":
-        steps.check(by_cracking)
+        test = by_cracking
+    else:
+        steps.lines(width, minimum.A_S_MIN)
+        test = minimum.BY_AREA
+    if steps.holds(test) or not waivable:
+        steps.check(test)
         return
-    steps.lines(width, minimum.A_S_MIN)
-    steps.check(minimum.BY_AREA)
+    steps.decide(test)
+    steps.check(minimum.WAIVER)

@@ -61,7 +61,9 @@ def record_section_figure(
         bottom=bottom_rows(bars, layers),
         top=rows,
         slab=slab,
-        caption="Section with bars, to scale",
+        caption="Section: bottom bars at midspan, top bars at the ends"
+        if rows
+        else "Section at midspan",
     )
     _record(sheet, "section", figure, [cover, *bars.values(), *top.values()])
 
@@ -74,7 +76,7 @@ def _top_bars(
     count, diameter, size = round(top["n_1"].value), top["d_b"].value, top["d_b"].source.row
     depth = edge + diameter / 2
     beside = round(top["n_o"].value) if "n_o" in top else 0
-    label = f"{count}-{size}" + (f", {beside}-{size} beside" if beside else "")
+    label = f"{count}-{size}" + (f" + {beside}-{size} each side" if beside else "")
     row = BarRow(count, diameter, depth, label)
     if not beside:
         return [row], None

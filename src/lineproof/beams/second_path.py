@@ -5,43 +5,54 @@ from __future__ import annotations
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import Shape
 from lineproof.beams.steps import Steps
+from lineproof.formula import Criterion
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import strain
+from lineproof.standards.a23_3 import strain, strain_closing
 
 SECOND_PATH = "second-path"
 
 
-def record_proof(steps: Steps, case: str, M_r: Entry) -> None:
+def zone_of(shape: Shape) -> str:
+    """Return the compression zone of a shape with compression at the top."""
+    return "rectangle" if shape == "rectangular" else "tee"
+
+
+def record_proof(
+    steps: Steps, key: strain.Key, M_r: Entry, proved: Criterion = strain.PROVED
+) -> None:
     """Record inside the open part neutral axis and moment by layers, and the check against M_r.
 
-    ``case`` is ``one layer``, ``two layers`` or ``compression bars``.
+    ``key`` is zone (tee, rectangle) and case (one layer, two layers, compression bars).
     """
-    if case in strain.LAYERED:
-        names = strain.AXIS[case].names
-        values = {n: steps.entry(n).value for n in names}
+    values = {n: steps.entry(n).value for n in strain.AXIS[key].names}
+    axis, moment = strain_closing.closings(key, values)
+    if key[1] in strain_closing.LAYERED:
         steps.found(
-            "c_l", strain.AXIS[case], strain.closing(case, values), unit="mm",
-            title="Depth of the neutral axis, by layers and strains", clause="10.1.1",
+            "c_l", strain.AXIS[key], axis, unit="mm", clause="10.1.1",
+            title="Depth of the neutral axis, by layers and strains",
         )  # fmt: skip
     steps.found(
-        "M_l", strain.MOMENT[case], strain.MOMENT_BOUND, unit="kN.m",
-        title="Moment resistance, by layers and strains", clause="10.1",
+        "M_l", strain.MOMENT[key], moment, unit="kN.m", clause="10.1",
+        title="Moment resistance, by layers and strains",
     )  # fmt: skip
-    steps.check(strain.PROVED, M_r=M_r)
+    resistance = "M_rb" if proved is strain.PROVED_BALANCED else "M_r"
+    steps.check(proved, **{resistance: M_r})
 
 
-def record_parabola(steps: Steps, case: str) -> None:
+def record_parabola(steps: Steps, key: strain.Key) -> None:
     """Record inside the open part what a parabolic concrete curve would give, for information."""
     steps.sheet.note("parabola", strain.PARABOLA, title="For information", basis="common practice")
+    values = {n: steps.entry(n).value for n in strain.AXIS_PARABOLA[key].names}
+    axis, moment = strain_closing.parabola_closings(key, values)
     steps.found(
-        "c_p", strain.AXIS_PARABOLA[case], strain.AXIS_BOUND_PARABOLA, unit="mm",
-        title="Depth of the neutral axis, parabolic concrete curve", clause="10.1.6",
+        "c_p", strain.AXIS_PARABOLA[key], axis, unit="mm", clause="10.1.6",
+        title="Depth of the neutral axis, parabolic concrete curve",
         settings=strain.PARABOLA_SETTINGS,
     )  # fmt: skip
     steps.found(
-        "M_p", strain.MOMENT_PARABOLA[case], strain.MOMENT_BOUND_PARABOLA, unit="kN.m",
-        title="Moment resistance, parabolic concrete curve", clause="10.1.6",
+        "M_p", strain.MOMENT_PARABOLA[key], moment, unit="kN.m", clause="10.1.6",
+        title="Moment resistance, parabolic concrete curve",
         settings=strain.PARABOLA_SETTINGS,
     )  # fmt: skip
 
@@ -54,14 +65,20 @@ def record_second_path(sheet: Sheet, shape: Shape) -> None:
     if "C_s" in flexure:
         case = "compression bars"
         steps.bind(**{n: sheet.entry(f"compression-bars/{n}") for n in ("A_sp", "d_p")})
+    key = (zone_of(shape), case)
     with sheet.part(SECOND_PATH, "Second path: layers and strains"):
-        record_proof(steps, case, flexure["M_r"])
-        record_parabola(steps, case)
-    prove_balanced(sheet, midspan(sheet, shape))
+        record_proof(steps, key, flexure["M_r"])
+        record_parabola(steps, key)
+    prove_balanced(sheet, midspan(sheet, shape), shape)
 
 
-def prove_balanced(sheet: Sheet, steps: Steps) -> None:
+def prove_balanced(sheet: Sheet, steps: Steps, shape: Shape) -> None:
     """Record the proof of the balanced moment, all bars at d, in a part of its own."""
     steps.bind(A_s=sheet.entry("balanced/A_sb"))
-    with sheet.part("second-path-balanced", "Second path: balanced condition"):
-        record_proof(steps, "one layer", sheet.entry("balanced/M_rb"))
+    with sheet.part(f"{SECOND_PATH}-balanced", "Second path: balanced condition"):
+        record_proof(
+            steps,
+            (zone_of(shape), "one layer"),
+            sheet.entry("balanced/M_rb"),
+            strain.PROVED_BALANCED,
+        )

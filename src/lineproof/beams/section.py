@@ -10,11 +10,16 @@ from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import flange
 
 SECTION = "section"
+_TITLES = {
+    "T": "Effective flange and gross section",
+    "L": "Effective flange and gross section",
+    "rectangular": "Gross section",
+}
 
 
 def record_section(sheet: Sheet, shape: Shape) -> None:
     """Record the effective width, the gross properties and both cracking moments."""
-    with sheet.part(SECTION, "Effective flange and gross section"):
+    with sheet.part(SECTION, _TITLES[shape]):
         if shape != "rectangular":
             _record_flange(sheet, shape)
         record_gross(sheet, shape)
@@ -41,11 +46,8 @@ def record_gross(sheet: Sheet, shape: Shape) -> None:
 
 
 def compression_zone(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
-    """Return what b, b_w and h_f stand for with compression at the top.
-
-    A rectangle is its own flange: b is the web width and h_f the whole depth.
-    """
+    """Return what b, b_w and h_f stand for with compression at the top; a rectangle has no h_f."""
     b_w = sheet.find("b_w")
     if shape == "rectangular":
-        return {"b": b_w, "b_w": b_w, "h_f": sheet.find("h")}
+        return {"b": b_w, "b_w": b_w}
     return {"b": sheet.find("b_f"), "b_w": b_w, "h_f": sheet.find("h_f")}

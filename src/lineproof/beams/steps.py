@@ -50,6 +50,11 @@ class Steps:
         """Record a decision."""
         return self.sheet.decide(test, **only(self.place | bound, test.names))
 
+    def holds(self, test: Criterion) -> bool:
+        """Tell whether a comparison would hold here, without recording it."""
+        values = [self.entry(name).value for name in test.names]
+        return test.holds(*(side(*values) for side in test.functions))
+
     def check(self, test: Criterion, key: str = "", **bound: Entry) -> Entry:
         """Record a check."""
         return self.sheet.check(test, key=key, **only(self.place | bound, test.names))

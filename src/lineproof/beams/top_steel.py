@@ -16,12 +16,21 @@ from lineproof.standards.nbc import loads
 
 TOP_STEEL = "top-steel"
 TITLE = "Top bars at the ends"
+_ASSUMED = (
+    "The restraint is assumed, by the coefficient of clause 9.3.3 for an exterior support. It "
+    "holds only where no beam continues beyond the support; where one does, the beam is "
+    "continuous and outside this calculation."
+)
+_RESTRAINT = {
+    "cast with a girder": f"The beam is cast with a girder that restrains its end. {_ASSUMED}",
+    "cast with a column": f"The beam is cast with a column that restrains its end. {_ASSUMED}",
+}
 _WIDTHS = {
     "T": minimum.WIDTH_FLANGE_T,
     "L": minimum.WIDTH_FLANGE_L,
     "rectangular": minimum.WIDTH_WEB,
 }
-_AREAS = {"T": bars.TOP_AREA_T, "L": bars.TOP_AREA_L, "rectangular": bars.AREA_OF_BARS}
+_AREAS = {"T": bars.TOP_AREA_T, "L": bars.TOP_AREA_L, "rectangular": bars.TOP_AREA_RECTANGULAR}
 
 
 def record_free_ends(sheet: Sheet) -> None:
@@ -29,7 +38,7 @@ def record_free_ends(sheet: Sheet) -> None:
     with sheet.part(TOP_STEEL, TITLE):
         sheet.note(
             "free-ends",
-            "The ends rest freely: no moment arises there; two top bars hold the stirrups.",
+            "The ends rest freely: no moment arises there; the bars that hold the stirrups are not part of this calculation.",
             title="Ends",
             basis="common practice",
         )
@@ -56,19 +65,26 @@ def record_top_steel(
         M_r = resistance(steps, "rectangular")
         record_yield(steps, pair)
         steps.check(clause.STRENGTH)
-        minimum_of(steps, inputs.minimum_rule, minimum.BY_CRACKING_TOP, _WIDTHS[shape])
+        minimum_of(
+            steps,
+            inputs.minimum_rule,
+            minimum.BY_CRACKING_TOP,
+            _WIDTHS[shape],
+            waivable=inputs.waive_minimum_at_ends,
+        )
         if proof:
-            record_proof(steps, "one layer", M_r)
+            record_proof(steps, ("rectangle", "one layer"), M_r)
         if shape != "rectangular":
-            steps.bind(h_f=sheet.entry("given/h_f"))
             steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
             steps.check(minimum.SPREAD)
 
 
 def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) -> Steps:
-    b_w, h = sheet.entry("given/b_w"), sheet.entry("given/h")
-    steps = Steps(sheet, {"b": b_w, "b_w": b_w, "h_f": h})
+    b_w = sheet.entry("given/b_w")
+    steps = Steps(sheet, {"b": b_w, "b_w": b_w})
+    origin = "given" if inputs.top_bars else "chosen: least mass, then few bars"
     sheet.note("bars-text", _text(inputs.shape, web, overhang), title="Bars")
+    sheet.note("restraint", _RESTRAINT[inputs.ends], title="Restraint", basis="common practice")
     steps.line(
         loads.MOMENT_END_GIRDER if inputs.ends.endswith("girder") else loads.MOMENT_END_COLUMN
     )
@@ -77,11 +93,11 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) 
         "r_s": sheet.lookup("r_s", bars.STIRRUP_BENDS, inputs.stirrup),
         "d_b": sheet.lookup("d_b", bars.BARS, web.size),
         "A_b": sheet.lookup("A_b", bars.BARS, web.size),
-        "n_b": sheet.given("n_1", str(web.number), "number of top bars within the web"),
+        "n_t": sheet.given("n_t", str(web.number), source=origin),
     }
-    entries["n_1"] = entries["n_b"]
+    entries["n_b"] = entries["n_t"]
     if inputs.shape != "rectangular":
-        entries["n_o"] = sheet.given("n_o", str(overhang))
+        entries["n_o"] = sheet.given("n_o", str(overhang), source=origin)
     steps.bind(**entries)
     steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
     steps.check(bars.FITS)

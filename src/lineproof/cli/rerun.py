@@ -94,14 +94,20 @@ def _rerun(stored: Stored, progress: Progress) -> Rerun:
     return Rerun(stored, text, calc, tuple(changes))
 
 
+MOST_CHANGES = 25
+
+
 def report_changes(rerun: Rerun) -> list[str]:
     """Return what differs, as sentences; cells edited after their run come first."""
     name = rerun.path
-    count = len({change.id for change in rerun.changes})
+    ids = {change.id for change in rerun.changes}
+    lines = list(dict.fromkeys(str(change) for change in rerun.changes))
+    hidden = len(lines) - MOST_CHANGES
     return [
         *(f"{name}: {sentence}" for sentence in stale_cells(rerun.stored.cells)),
-        f"{name}: {count} {'line differs' if count == 1 else 'lines differ'} from a re-run",
-        *(f"  {change}" for change in rerun.changes),
+        f"{name}: {len(ids)} {'line differs' if len(ids) == 1 else 'lines differ'} from a re-run",
+        *(f"  {line}" for line in lines[:MOST_CHANGES]),
+        *([f"  and {hidden} more"] if hidden > 0 else []),
     ]
 
 

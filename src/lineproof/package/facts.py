@@ -10,6 +10,7 @@ from typing import Any
 from lineproof.errors import UserError
 
 STATUSES = ("preliminary", "for review", "for permit", "for construction")
+FINAL_STATUSES = ("for permit", "for construction")
 PAPERS = {"letter": "us-letter", "us-letter": "us-letter", "a4": "a4"}
 _NO_DATE = dt.date(2000, 1, 1)
 
@@ -79,7 +80,7 @@ def project_facts(project: Mapping[str, Any], codes: Mapping[str, Any]) -> Proje
         ),
         revisions=revisions,
         criteria=_criteria(facts, codes),
-        status=facts.text("issue", "status"),
+        status=_status(facts.text("issue", "status")),
         superseded=facts.text("issue", "superseded"),
         revision=facts.text("issue", "revision") or (revisions[-1].letter if revisions else ""),
         date=_date(date_text),
@@ -160,6 +161,13 @@ def _date(text: str) -> dt.date:
     if not 1970 <= date.year <= 2200:  # noqa: PLR2004 - what a document date can hold
         raise UserError(f"issue.date: {text[:40]!r} is out of range; write it like '2026-11-20'")
     return date
+
+
+def _status(status: str) -> str:
+    if status and status not in STATUSES:
+        known = ", ".join(repr(word) for word in STATUSES)
+        raise UserError(f"issue.status: {status[:40]!r} is not known; write one of {known}")
+    return status
 
 
 def _paper(size: str) -> str:

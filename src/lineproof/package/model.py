@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from typing import Any
 
 from lineproof.errors import FaultList, UserError
-from lineproof.package.facts import ProjectFacts, project_facts
+from lineproof.package.facts import FINAL_STATUSES, ProjectFacts, project_facts
 from lineproof.package.prose import Mark, Prose, read_prose
 from lineproof.package.summary import (
     Confirmation,
@@ -95,6 +95,19 @@ class Calc:
     scope: str
     not_covered: tuple[NotCovered, ...]
     marks: Mapping[str, tuple[str, ...]]
+    statements: tuple[str, ...]
+
+    @property
+    def unconfirmed(self) -> str:
+        """Say how many clauses rest on memory and are not confirmed by the office; "" if none."""
+        count = sum(not item.confirmed for item in self.confirm)
+        if not count:
+            return ""
+        are = "clause is" if count == 1 else "clauses are"
+        return (
+            f"{count} {are} taken from memory of the standards and not yet confirmed by the "
+            "office: see Values to confirm."
+        )
 
     @property
     def in_front(self) -> frozenset[str]:
@@ -147,17 +160,29 @@ def build_package(
         walk = walks[place] if walks is not None else None
         prefix = f"{_slug(record['calc']['id'])}/" if len(data) > 1 else ""
         calcs.append(_Builder(record, prefix, marks or {}, faults).calc(walk))
-    faults.raise_if_any()
     first = data[0]
+    facts = project_facts(first["project"], first["codes"])
+    _check_status(facts.status, calcs, faults)
+    faults.raise_if_any()
     return Package(
         title=calcs[0].title
         if len(calcs) == 1
         else first["project"].get("project", {}).get("name", ""),
-        facts=project_facts(first["project"], first["codes"]),
+        facts=facts,
         calcs=tuple(calcs),
         notation=notation_rows(data),
         missing_glyphs=any(tree_has_missing(record) for record in data),
     )
+
+
+def _check_status(status: str, calcs: Sequence[Calc], faults: FaultList) -> None:
+    """Refuse to issue what is preliminary for a permit or for construction."""
+    preliminary = [calc.id for calc in calcs if calc.scope.startswith("preliminary")]
+    if preliminary and status in FINAL_STATUSES:
+        faults.add(
+            f"issue.status: {status!r}: {', '.join(preliminary)} is preliminary and cannot be "
+            f"issued {status}; write 'preliminary' or 'for review'"
+        )
 
 
 def _plain_data(record: Any) -> Mapping[str, Any]:
@@ -205,7 +230,7 @@ class _Builder:
             digest=record["digest"],
             record_text=_json(record),
             blocks=self._blocks(walk),
-            summary=summary_rows(self.entries, self.rows, self.notation, self.prefix),
+            summary=summary_rows(record["parts"], self.rows, self.notation, self.prefix),
             loads=load_rows(record["parts"], self.rows, self.prefix),
             section=next((f for f in figures if f.id.endswith("/section")), None),
             loading=tuple(f for f in figures if f.id.endswith(("/plan", "/loading"))),
@@ -217,6 +242,7 @@ class _Builder:
                 for item in status.get("not_covered", [])
             ),
             marks={entry_id: tuple(notes) for entry_id, notes in self.marks.items()},
+            statements=tuple(r.text for r in rows if r.id.endswith("/bars-text")),
         )
 
     def _blocks(self, walk: Walk | None) -> tuple[PartBlock | ProseBlock, ...]:

@@ -31,6 +31,7 @@ class SummaryRow:
     ratio: str
     verdict: str
     holds: bool
+    group: str
 
 
 @dataclass(frozen=True, slots=True)
@@ -76,13 +77,15 @@ class Confirmation:
 
 
 def summary_rows(
-    entries: Mapping[str, Mapping[str, Any]], rows: Rows, notation: Notation, prefix: str
+    parts: Sequence[Mapping[str, Any]], rows: Rows, notation: Notation, prefix: str
 ) -> tuple[SummaryRow, ...]:
-    """Return every check: demand, resistance or limit, ratio, verdict.
+    """Return every check: demand, resistance or limit, ratio, verdict; ``group`` is its part.
 
     A proof of the calculation itself (two paths agree) that holds is not a check of the beam.
     """
-    checks = [entry for entry in entries.values() if entry["kind"] == "check"]
+    groups = {entry["id"]: part["title"] for part in parts for entry in part["entries"]}
+    entries = [entry for part in parts for entry in part["entries"]]
+    checks = [entry for entry in entries if entry["kind"] == "check"]
     made = []
     for entry in checks:
         if entry.get("proof") and entry["holds"]:
@@ -100,6 +103,7 @@ def summary_rows(
                 ratio=printed.ratio,
                 verdict=printed.verdict,
                 holds=printed.holds,
+                group=groups.get(entry["id"], ""),
             )
         )
     return tuple(made)

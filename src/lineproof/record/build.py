@@ -107,7 +107,8 @@ class _Builder:
         rows: list[dict[str, Any]] = []
         number = 0
         for entry in part.entries.values():
-            numbered = entry.kind not in _UNNUMBERED
+            # A note on a clause may have to be confirmed, so it can be named.
+            numbered = entry.kind not in _UNNUMBERED or bool(entry.source.clause)
             number += numbered
             rows.append(self._entry(entry, f"{label}.{number}" if numbered else ""))
         return {"key": part.key, "label": label, "title": part.title, "entries": rows}
@@ -168,6 +169,7 @@ class _Builder:
                 "left": sides[0] / internal_factor(test.unit),
                 "right": sides[1] / internal_factor(test.unit),
                 "unit": test.unit,
+                "conclusion": test.yes,
                 "printed": self._printer.comparison(test, closing_args, sides, holds=holds),
             },
         }

@@ -11,6 +11,9 @@ from lineproof.record import Entry, Part
 from lineproof.record.entry import VALUES
 
 
+_CALLS_NAMED = 3
+
+
 class Parts:
     """Parts by key, the one that is open, and the entries its names stand for.
 
@@ -39,6 +42,7 @@ class Parts:
         self._part, self._scope_of_part = part, {}
         try:
             yield part
+            self._keep_apart(part)
         except BaseException:
             self._stopped[key] = title
             raise
@@ -107,8 +111,10 @@ class Parts:
             raise UserError(
                 f"{name} stands in {places}; say which: {name}=sheet.entry({values[0].id!r})"
             )
-        waiting = [call for key, call in self.expected.items() if key not in self._parts]
-        hint = f" (not run yet: {', '.join(waiting)})" if waiting else ""
+        calls = [call for key, call in self.expected.items() if key not in self._parts]
+        waiting = list(dict.fromkeys(calls))
+        more = ", ..." if len(waiting) > _CALLS_NAMED else ""
+        hint = f" (not run yet: {', '.join(waiting[:_CALLS_NAMED])}{more})" if waiting else ""
         raise UserError(f"{name} is not recorded{hint}; give it first, or name it {name}=...")
 
     def _record(self, entry: Entry) -> Entry:
@@ -119,6 +125,21 @@ class Parts:
         if entry.kind in VALUES:
             self._scope_of_part[entry.symbol] = entry
         return entry
+
+    def _keep_apart(self, part: Part) -> None:
+        """Refuse in a part of the user's own a symbol that the calculation finds by its name."""
+        if part.key in self.expected:
+            return
+        own = {s for s, entry in part.entries.items() if entry.kind in VALUES}
+        taken = [
+            f"{symbol} stands in {other.key}/{symbol} already; give your own value another symbol"
+            for other in self._parts.values()
+            if other.key in self.expected
+            for symbol in other.entries
+            if symbol in own
+        ]
+        if taken:
+            raise UserError(taken)
 
     def _refuse_place(self, name: str) -> NoReturn:
         part = self._open_part()

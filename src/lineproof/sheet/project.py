@@ -3,12 +3,27 @@
 from __future__ import annotations
 
 import datetime as dt
+import difflib
 import tomllib
+from collections.abc import Sequence
 from pathlib import Path
 from typing import Any
 
 from lineproof.errors import UserError
 
+KNOWN: dict[str, tuple[str, ...]] = {
+    "project": ("name", "number", "address", "client"),
+    "firm": ("name", "permit"),
+    "codes": ("pair", "amendments"),
+    "building": ("importance",),
+    "location": ("grid", "level"),
+    "issue": ("status", "date", "revision", "superseded", "prepared_by", "checked_by"),
+    "paper": ("size",),
+    "drawings": ("number", "revision", "title"),
+    "revisions": ("letter", "date", "description"),
+    "confirmed": ("clause", "edition", "value", "by", "on"),
+}
+"""The facts of a project by table; ``criteria`` holds whatever the office wants to state."""
 LARGEST_FILE = 1_000_000
 
 
@@ -52,7 +67,33 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
         given = facts.get(rows, [])
         if not (isinstance(given, list) and all(isinstance(row, dict) for row in given)):
             faults.append(f"{path}: {rows!r} must be a list of tables; write [[{rows}]]")
+    faults += _unknown(path, facts)
     if not isinstance(facts.get("codes"), dict) or "pair" not in facts["codes"]:
         faults.append(f"{path}: no code pair; write under [codes]: pair = 'NBC 2015 + A23.3-14'")
     if faults:
         raise UserError(faults)
+
+
+def _unknown(path: Path, facts: dict[str, Any]) -> list[str]:
+    """Return a fault per fact that nothing reads: a misspelt one would print as an empty line."""
+    faults = [
+        f"{path}: {table!r} is not a table of facts{_near(table, [*KNOWN, 'criteria'])}"
+        for table in facts
+        if table not in KNOWN and table != "criteria"
+    ]
+    for table, known in KNOWN.items():
+        given = facts.get(table, {})
+        for row in given if isinstance(given, list) else [given]:
+            keys = row if isinstance(row, dict) else {}
+            faults += [
+                f"{path}: {table}.{key[:40]} is not a fact{_near(key, known)}"
+                for key in keys
+                if key not in known
+            ]
+    return faults
+
+
+def _near(word: str, known: Sequence[str]) -> str:
+    close = difflib.get_close_matches(word[:40], known, n=1)
+    listed = ", ".join(known)
+    return f"; did you mean {close[0]!r}?" if close else f"; there are {listed}"

@@ -127,7 +127,7 @@ class Sheet(Parts):
         read = read_quantity(symbol, f"{number} {unit}", unit)
         made = LookupSource(
             data, table.name, row, read, unit, title or data.meaning, table.source,
-            table.clause, table.basis,
+            table.clause_of(column), table.basis,
         )  # fmt: skip
         return self._record(Entry(self._open_part(), symbol, LOOKUP, made, (), read.value))
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import difflib
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from lineproof.errors import UserError
 from lineproof.quantity import echo
@@ -14,7 +14,8 @@ from lineproof.quantity import echo
 class LookupTable:
     """A table: rows by key, each with a number (as text) per column.
 
-    ``columns`` gives the unit of each column; ``word`` what a row is called in an error.
+    ``columns`` gives the unit of each column, ``clauses`` the clause of columns with their own;
+    ``word`` is what a row is called in an error.
     """
 
     name: str
@@ -24,6 +25,11 @@ class LookupTable:
     source: str
     clause: str = ""
     basis: str = ""
+    clauses: Mapping[str, str] = field(default_factory=dict)
+
+    def clause_of(self, column: str) -> str:
+        """Return the clause of a column, where it has its own, else that of the table."""
+        return self.clauses.get(column, self.clause)
 
     def row(self, key: object, what: str) -> Mapping[str, str]:
         """Return a row; raises :class:`UserError` that names ``what`` and the rows."""
@@ -44,4 +50,4 @@ class LookupTable:
 
 def article(word: str) -> str:
     """Return 'a' or 'an'."""
-    return "an" if word[0] in "aeiou" else "a"
+    return "an" if word[0] in "aeiou" and not word.startswith("us") else "a"

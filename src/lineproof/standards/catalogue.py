@@ -8,20 +8,32 @@ from typing import TypeVar
 from lineproof.formula import Criterion, Formula, Notation
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3 import (
+    analysis,
     bars,
+    bearing,
     capacity,
     compression_steel,
     cover,
     crack_control,
+    cutoff,
+    deflection,
+    development,
     flange,
     flexure,
+    hooks,
+    interface,
+    laps,
     materials,
     minimum,
+    shear,
+    shear_bars,
     strain,
+    strain_closing,
     stress_block,
+    torsion,
 )
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
-from lineproof.standards.nbc import combinations, loads
+from lineproof.standards.nbc import combinations, loads, reduction
 from lineproof.standards.nbc.notation import NOTATION as NBC
 
 Kind = TypeVar("Kind", Formula, LookupTable)
@@ -31,7 +43,8 @@ NOTATION: Notation = A23_3 | NBC
 
 _MODULES = (
     materials, stress_block, flange, flexure, compression_steel, minimum, crack_control,
-    capacity, bars, cover, strain, loads, combinations,
+    capacity, bars, cover, strain, strain_closing, loads, combinations, reduction, analysis,
+    shear, shear_bars, torsion, interface, bearing, deflection, development, hooks, laps, cutoff,
 )  # fmt: skip
 
 

@@ -24,8 +24,8 @@ class CodePair:
 
 _DUCTILITY = ("10.5.2", "limit of c/d: changed since A23.3-14")
 _UNSEEN = (
-    ("4.1.3.2", "load cases: this edition has not been seen"),
-    ("4.1.5.3", "specified live loads: this edition has not been seen"),
+    ("NBC 4.1.3.2", "load cases: this edition has not been seen"),
+    ("NBC 4.1.5.3", "specified live loads: this edition has not been seen"),
     ("10.1.7", "stress block: assumed unchanged"),
 )
 

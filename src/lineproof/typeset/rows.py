@@ -147,11 +147,18 @@ def _origins(
     args: Mapping[str, str], notation: Notation, labels: Mapping[str, str]
 ) -> tuple[Origin, ...]:
     return tuple(
-        Origin(source, labels.get(source, ""), symbol_math(symbol_of(name, notation)))
+        Origin(source, labels.get(source, ""), _traced(name, source, notation))
         for name, source in args.items()
         # A figure or table names what it rests on by id; there is no symbol in it to trace.
         if source in labels and "/" not in name
     )
+
+
+def _traced(name: str, source: str, notation: Notation) -> Math:
+    """Return the symbol of an argument; where its line has another one, "b = b_f"."""
+    symbol = symbol_math(symbol_of(name, notation))
+    own = source.partition("/")[2]
+    return symbol if own == name else row([symbol, EQUALS, symbol_math(symbol_of(own, notation))])
 
 
 def _basis(entry: Entry) -> str:
@@ -181,7 +188,7 @@ def _given(entry: Entry, notation: Notation) -> dict[str, Any]:
 
 
 def _lookup(entry: Entry, notation: Notation) -> dict[str, Any]:
-    remarks = [f"From {entry['table']}, row {entry['row']}."]
+    remarks = [f"Table: {entry['table']}, row {entry['row']}."]
     if entry.get("source"):
         remarks.append(f"Source: {entry['source']}.")
     return {"result": _equation(entry, notation), "remarks": remarks}
@@ -189,7 +196,7 @@ def _lookup(entry: Entry, notation: Notation) -> dict[str, Any]:
 
 def _line(entry: Entry, notation: Notation) -> dict[str, Any]:
     note = empirical_note(entry.get("numbers") or {})
-    remarks = [f"Numbers of the formula: {note}."] if note else []
+    remarks = [f"Units of the constants: {note}."] if note else []
     return {
         "chains": (line_chain(entry, notation),),
         "result": _equation(entry, notation),
@@ -227,14 +234,21 @@ def _found(entry: Entry, notation: Notation) -> dict[str, Any]:
     procedure, printed = entry["procedure"], entry["printed"]
     closing = entry.get("closing")
     title = procedure.get("title") or procedure["name"]
-    text = f"Found by {title} ({procedure['name']}, version {procedure['version']}), with"
+    text = f"Found by {title} (version {procedure['version']}), with"
     return {
         "inputs": _inputs(printed.get("args", {}), notation),
         "chains": criterion_chains(closing, notation) if closing else (),
         "result": _equation(entry, notation),
         "text": text if printed.get("args") else text.removesuffix(", with") + ".",
-        "conclusion": "The closing criterion confirms the value by hand." * bool(closing),
+        "conclusion": _closing_sentence(closing),
     }
+
+
+def _closing_sentence(closing: Mapping[str, Any] | None) -> str:
+    """Say what the closing criterion shows."""
+    if not closing:
+        return ""
+    return str(closing.get("conclusion") or "The closing criterion holds.")
 
 
 def _inputs(args: Mapping[str, str], notation: Notation) -> tuple[Math, ...]:

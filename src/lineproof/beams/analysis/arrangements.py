@@ -2,7 +2,7 @@
 
 A23.3, 9.2.3.1: factored dead load on all spans with factored live load on two adjacent spans, on
 alternate spans, and on all spans. Alternate spans give the largest span moments there are. Two
-adjacent spans do not give the largest support moment there is when there are three spans or more:
+adjacent spans do not give the largest support moment there is when there are four spans or more:
 that needs every other span beyond the two loaded as well (``beyond=True``). NBC 4.1.5.3 asks for
 any portions, so the wider set is on offer; the difference is shown in the tests.
 """

@@ -6,7 +6,7 @@ shear method can take the pair of one case, and every governing value says which
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from typing import Literal
 
@@ -211,8 +211,9 @@ def span_moment(solved: CaseSolution, number: int, *, largest: bool = True) -> G
 class Reaction:
     """Unfactored reaction of one load type at one support [N], and the couple [N.mm].
 
-    ``everywhere`` has the load on all spans; ``largest`` and ``smallest`` have live load where it
-    is worst among the arrangements, and are the same as ``everywhere`` for other loads.
+    ``everywhere`` has the load on all spans; ``largest`` and ``smallest`` have live load on those
+    spans only that raise or lower the reaction, the worst of all arrangements, and are the same as
+    ``everywhere`` for other loads. The couple belongs to ``everywhere``.
     """
 
     support: int
@@ -223,26 +224,20 @@ class Reaction:
     couple: float
 
 
-def unfactored_reactions(
-    solution: Solution, arrangements: Iterable[Arrangement]
-) -> tuple[Reaction, ...]:
+def unfactored_reactions(solution: Solution) -> tuple[Reaction, ...]:
     """Return the reactions of every support by load type, for whoever designs what carries it."""
-    placed = tuple(arrangements)
-    kinds = tuple(dict.fromkeys(kind for kind, _ in solution.rows))
     made = []
-    for kind in kinds:
-        where: list[Mapping[int, bool]] = [{}]
-        if kind in LIVE:
-            where += [{s: s in a.spans for s in range(1, len(solution.spans) + 1)} for a in placed]
-        factors = [[float(k == kind and on.get(s, True)) for k, s in solution.rows] for on in where]
-        cases = np.array(factors)
-        R, couples = cases @ solution.reactions, cases[0] @ solution.couples
+    for kind in dict.fromkeys(kind for kind, _ in solution.rows):
+        own = [i for i, (k, _) in enumerate(solution.rows) if k == kind]
+        R = solution.reactions[own]
+        total, couples = R.sum(axis=0), solution.couples[own].sum(axis=0)
+        live = kind in LIVE
+        high = np.maximum(R, 0.0).sum(axis=0) if live else total
+        low = np.minimum(R, 0.0).sum(axis=0) if live else total
+        numbers = zip(total.tolist(), high.tolist(), low.tolist(), couples.tolist(), strict=True)
         made += [
-            Reaction(
-                i + 1, kind, float(R[0, i]), float(R[:, i].max()), float(R[:, i].min()),
-                float(couples[i]),
-            )
-            for i, support in enumerate(solution.beam.supports)
-            if support.kind != "free"
-        ]  # fmt: skip
+            Reaction(number, kind, *values)
+            for number, values in enumerate(numbers, start=1)
+            if solution.beam.supports[number - 1].kind != "free"
+        ]
     return tuple(made)

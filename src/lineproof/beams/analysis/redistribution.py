@@ -44,16 +44,7 @@ def redistribute(
         keep = ~np.isin(np.arange(len(solved.cases)), sorted(only))
     spans = list(solved.solution.spans)
     for support, percent in reductions.items():
-        before = spans[support - 2] if support > 1 else None
-        after = spans[support - 1] if support <= len(spans) else None
-        part = np.where(keep, 0.0, percent / 100)
-        hogging = _hogging(before, after)
-        if before is not None:
-            change = np.where(hogging, -part * before.end_moment, 0.0)
-            spans[support - 2] = _shifted(before, right=change)
-        if after is not None:
-            change = np.where(hogging, -part * after.M0, 0.0)
-            spans[support - 1] = _shifted(after, left=change)
+        _change(spans, support, np.where(keep, 0.0, percent / 100))
     reactions, couples = support_forces(beam, spans)
     rotations = np.full_like(solved.solution.rotations, np.nan)
     solution = replace(
@@ -61,6 +52,17 @@ def redistribute(
         couples=couples,
     )  # fmt: skip
     return CaseSolution(solution, solved.cases)
+
+
+def _change(spans: list[Curves], support: int, part: Floats) -> None:
+    """Take a part of the hogging moments at a support off both spans beside it."""
+    before = spans[support - 2] if support > 1 else None
+    after = spans[support - 1] if support <= len(spans) else None
+    part = np.where(_hogging(before, after), part, 0.0)
+    if before is not None:
+        spans[support - 2] = _shifted(before, right=-part * before.end_moment)
+    if after is not None:
+        spans[support - 1] = _shifted(after, left=-part * after.M0)
 
 
 def _hogging(before: Curves | None, after: Curves | None) -> NDArray[np.bool_]:

@@ -12,7 +12,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -236,32 +236,11 @@ def _curves(
 
 def _hung(curves: Curves, at_root: Floats) -> Curves:
     """Return a cantilever on the left, its slope and deflection counted from its root."""
-    none = np.zeros_like(at_root)
-    level = Curves(
-        curves.length,
-        curves.EI,
-        curves.breaks,
-        curves.w,
-        curves.P,
-        curves.M0,
-        curves.V0,
-        none,
-        none,
-    )
+    level = replace(curves, slope0=np.zeros_like(at_root))
     root = np.array([curves.length])
     slope0 = at_root - level.slope(root)[:, 0]
     y0 = -(level.deflection(root)[:, 0] + slope0 * curves.length)
-    return Curves(
-        curves.length,
-        curves.EI,
-        curves.breaks,
-        curves.w,
-        curves.P,
-        curves.M0,
-        curves.V0,
-        slope0,
-        y0,
-    )
+    return replace(curves, slope0=slope0, y0=y0)
 
 
 def support_forces(beam: Beam, spans: Sequence[Curves]) -> tuple[Floats, Floats]:

@@ -74,6 +74,15 @@ FITS = _criterion(
     no="The bars do NOT fit: fewer or larger bars, two layers or a wider web.",
     key="bars-fit",
 )
+FITS_SECOND = _criterion(
+    "s_min2 <= s_c2",
+    clause="A23.1 6.6.5.2",
+    title="Bars fit into the second layer",
+    basis=FROM_MEMORY,
+    yes="The bars of the second layer fit.",
+    no="The bars of the second layer do NOT fit: fewer or larger bars, or a wider web.",
+    key="bars-fit-2",
+)
 DEPTH_FIRST = _formula(
     "d_1 = h - c_c - d_bs - d_b/2",
     title="Depth to the first layer",
@@ -101,19 +110,22 @@ DEPTH_TWO_LAYERS = _formula(
     basis=MECHANICS,
 )
 TOP_AREA_T = _formula(
-    "A_s = (n_1 + 2*n_o)*A_b",
+    "A_s = (n_t + 2*n_o)*A_b",
     title="Area of the top bars, web and both overhangs",
     clause="10.5.3.1",
     basis=MECHANICS,
 )
 TOP_AREA_L = _formula(
-    "A_s = (n_1 + n_o)*A_b",
+    "A_s = (n_t + n_o)*A_b",
     title="Area of the top bars, web and overhang",
     clause="10.5.3.1",
     basis=MECHANICS,
 )
+TOP_AREA_RECTANGULAR = _formula(
+    "A_s = n_t*A_b", title="Area of the top bars", clause="G30.18", basis=MECHANICS
+)
 COMPRESSION_AREA = _formula(
-    "A_sp = n_1*A_b",
+    "A_sp = n_c*A_b",
     title="Area of the compression bars",
     clause="G30.18",
     basis=MECHANICS,
@@ -144,8 +156,9 @@ FORMULAS = (
     TOTAL_AREA,
     TOP_AREA_T,
     TOP_AREA_L,
+    TOP_AREA_RECTANGULAR,
     COMPRESSION_AREA,
     COMPRESSION_DEPTH,
 )
-CRITERIA = (FITS,)
+CRITERIA = (FITS, FITS_SECOND)
 TABLES = (BARS, STIRRUP_BENDS, GRADES)

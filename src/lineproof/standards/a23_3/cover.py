@@ -40,6 +40,7 @@ EXPOSURES = LookupTable(
     "CSA A23.1, Tables 2 and 17",
     clause="A23.1 Table 17",
     basis=FROM_MEMORY,
+    clauses={"f_cmin": "A23.1 Table 2"},
 )
 _RATINGS = ("0.5 h", "0.75 h", "1 h", "1.5 h", "2 h", "3 h", "4 h")
 FIRE_COVER = LookupTable(
@@ -51,7 +52,7 @@ FIRE_COVER = LookupTable(
         for rating, cover in zip(_RATINGS, ("20", "20", "20", "25", "25", "39", "50"), strict=True)
     },
     "NBC Division B, Appendix D, D-2.9",
-    clause="D-2.9",
+    clause="NBC D-2.9",
     basis=NBC_APPENDIX_D,
 )
 FIRE_SLAB = LookupTable(
@@ -68,7 +69,7 @@ FIRE_SLAB = LookupTable(
         )
     },
     "NBC Division B, Appendix D, D-2.2",
-    clause="D-2.9.4",
+    clause="NBC D-2.9.4",
     basis=NBC_APPENDIX_D,
 )
 
@@ -114,7 +115,7 @@ DURABLE_BAR = _criterion(
 )
 FIRE_SAFE = _criterion(
     "c_fire <= c_b1",
-    clause="D-2.9",
+    clause="NBC D-2.9",
     title="Cover of the principal bars for fire",
     basis=NBC_APPENDIX_D,
     yes="The principal bars are covered as the fire rating requires.",
@@ -123,7 +124,7 @@ FIRE_SAFE = _criterion(
 )
 FIRE_SAFE_SLAB = _criterion(
     "h_fire <= h_f",
-    clause="D-2.9.4",
+    clause="NBC D-2.9.4",
     title="Thickness of the slab over the beam for fire",
     basis=NBC_APPENDIX_D,
     yes="The slab is as thick as the fire rating requires.",
@@ -141,7 +142,7 @@ STRONG_ENOUGH = _criterion(
 )
 WIDE_ENOUGH_TWO_HOURS = _criterion(
     "140 <= b_w",
-    clause="D-2.9",
+    clause="NBC D-2.9",
     title="Width of the beam for a rating above 2 h",
     basis=NBC_APPENDIX_D,
     numbers={"140": "mm"},
@@ -151,7 +152,7 @@ WIDE_ENOUGH_TWO_HOURS = _criterion(
 )
 WIDE_ENOUGH_THREE_HOURS = _criterion(
     "165 <= b_w",
-    clause="D-2.9",
+    clause="NBC D-2.9",
     title="Width of the beam for a rating above 3 h",
     basis=NBC_APPENDIX_D,
     numbers={"165": "mm"},
@@ -161,7 +162,7 @@ WIDE_ENOUGH_THREE_HOURS = _criterion(
 )
 WIDE_ENOUGH = _criterion(
     "100 <= b_w",
-    clause="D-2.9",
+    clause="NBC D-2.9",
     title="Least width of beams in the fire tables",
     basis=NBC_APPENDIX_D,
     numbers={"100": "mm"},

@@ -22,6 +22,7 @@ LIMITS = LookupTable(
     "A23.3, 10.6.1 and 10.6.2",
     clause="10.6",
     basis=FROM_MEMORY,
+    clauses={"z_max": "10.6.1", "rho_sk": "10.6.2"},
 )
 
 STRESS_ALLOWANCE = _formula(

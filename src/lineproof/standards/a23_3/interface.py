@@ -67,8 +67,7 @@ RESISTANCE = _formula(
     basis=FROM_MEMORY,
 )
 RESISTANCE_INCLINED = _formula(
-    "v_r = min(lambda_*phi_c*(c_v + mu*sigma), 0.25*phi_c*f_c)"
-    " + phi_s*rho_v*f_y*cos(alpha_f)",
+    "v_r = min(lambda_*phi_c*(c_v + mu*sigma), 0.25*phi_c*f_c) + phi_s*rho_v*f_y*cos(alpha_f)",
     clause="11.5",
     title="Interface shear resistance, inclined bars",
     basis=FROM_MEMORY,

@@ -23,6 +23,7 @@ RESISTANCE_FACTORS = LookupTable(
     "A23.3, 8.4.2 and 8.4.3",
     clause="8.4",
     basis=BENTZ_2006,
+    clauses={"phi_c": "8.4.2", "phi_s": "8.4.3"},
 )
 DENSITY_FACTORS = LookupTable(
     "Factor for low-density concrete",
@@ -45,6 +46,7 @@ CONSTANTS = LookupTable(
     "A23.3, 8.5.4.1 and 10.1.3",
     clause="8.5.4.1, 10.1.3",
     basis=FROM_MEMORY,
+    clauses={"E_s": "8.5.4.1", "eps_cu": "10.1.3"},
 )
 
 E_C_NORMAL = _formula(

@@ -71,7 +71,7 @@ WAIVER = _criterion(
     title="Waiver of the minimum: resistance a third above the moment",
     basis=FROM_MEMORY,
     yes="The resistance is a third above the moment: the minimum need not be met.",
-    no="The resistance is NOT a third above the moment.",
+    no="The resistance is NOT a third above the moment: the minimum must be met.",
     key="waiver",
 )
 SPREAD_WIDTH = _formula(

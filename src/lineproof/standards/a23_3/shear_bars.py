@@ -13,7 +13,7 @@ _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
 
 TENSION_SIDE = _formula(
-    "F_lt = M_f/d_v + (V_f - 0.5*V_s)*cot(theta)",
+    "F_lt = M_f/d_v + max(V_f - 0.5*V_s, 0)*cot(theta)",
     clause="11.3.9.2",
     title="Force in the bars on the tension side",
     basis=SHEAR_2004,

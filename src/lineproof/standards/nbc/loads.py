@@ -46,7 +46,7 @@ USES = LookupTable(
         "roof": _use("1.0"),
     },
     "NBC Division B, Table 4.1.5.3",
-    clause="4.1.5.3",
+    clause="NBC 4.1.5.3",
     basis=NBC_LOADS,
 )
 UNIT_WEIGHT = LookupTable(
@@ -55,44 +55,56 @@ UNIT_WEIGHT = LookupTable(
     {"gamma_w": "kN/m3"},
     {"reinforced, normal density": {"gamma_w": "24"}},
     "common value of reinforced normal-density concrete",
-    clause="4.1.4.1",
+    clause="NBC 4.1.4.1",
     basis=FROM_MEMORY,
 )
 
+TRIBUTARY = _formula(
+    "b_tr = s_b",
+    clause="geometry",
+    title="Tributary width, half the spacing on each side",
+    basis=MECHANICS,
+)
 SLAB = _formula(
     "w_sl = gamma_w*h_f*b_tr",
-    clause="4.1.4.1",
+    clause="NBC 4.1.4.1",
     title="Slab on the tributary width",
     basis=MECHANICS,
 )
 WEB = _formula(
     "w_wb = gamma_w*b_w*(h - h_f)",
-    clause="4.1.4.1",
+    clause="NBC 4.1.4.1",
     title="Web below the slab (the slab is counted once)",
     basis=MECHANICS,
 )
 BEAM = _formula(
-    "w_bm = gamma_w*b_w*h", clause="4.1.4.1", title="Weight of the beam", basis=MECHANICS
+    "w_bm = gamma_w*b_w*h", clause="NBC 4.1.4.1", title="Weight of the beam", basis=MECHANICS
 )
 SUPERIMPOSED = _formula(
     "w_SD = q_SD*b_tr",
-    clause="4.1.4.1",
+    clause="NBC 4.1.4.1",
     title="Superimposed dead load on the tributary width",
     basis=MECHANICS,
 )
 DEAD_WITH_SLAB = _formula(
-    "w_D = w_sl + w_wb + w_SD", clause="4.1.4.1", title="Dead load", basis=MECHANICS
+    "w_D = w_sl + w_wb + w_SD", clause="NBC 4.1.4.1", title="Dead load", basis=MECHANICS
 )
-DEAD_BEAM = _formula("w_D = w_bm + w_SD", clause="4.1.4.1", title="Dead load", basis=MECHANICS)
+FLOOR = _formula(
+    "w_fl = q_fl*b_tr",
+    clause="NBC 4.1.4.1",
+    title="Floor carried, on the tributary width",
+    basis=MECHANICS,
+)
+DEAD_BEAM = _formula("w_D = w_bm + w_fl + w_SD", clause="NBC 4.1.4.1", title="Dead load", basis=MECHANICS)
 LIVE = _formula(
     "w_L = q_L*b_tr",
-    clause="4.1.5.3",
+    clause="NBC 4.1.5.3",
     title="Live load on the tributary width, not reduced",
     basis=MECHANICS,
 )
 LIVE_IS_ENOUGH = _criterion(
     "q_Lmin <= q_L",
-    clause="4.1.5.3",
+    clause="NBC 4.1.5.3",
     title="Live load given against the least of the use",
     basis=NBC_LOADS,
     yes="The live load given is not below the least of the use.",
@@ -131,11 +143,13 @@ MOMENT_END_COLUMN = _formula(
 )
 
 FORMULAS = (
+    TRIBUTARY,
     SLAB,
     WEB,
     BEAM,
     SUPERIMPOSED,
     DEAD_WITH_SLAB,
+    FLOOR,
     DEAD_BEAM,
     LIVE,
     MOMENT_SIMPLE,

@@ -7,6 +7,8 @@ from lineproof.formula import Notation, Symbol
 _ROWS = (
     ("gamma_w", "γ", "w", "", "unit weight of reinforced concrete", "kN/m3"),
     ("q_SD", "q", "SD", "", "superimposed dead load", "kPa"),
+    ("q_fl", "q", "fl", "", "weight of the floor carried", "kPa"),
+    ("w_fl", "w", "fl", "", "weight of the floor carried, on the tributary width", "kN/m"),
     ("q_L", "q", "L", "", "specified live load", "kPa"),
     ("q_Lmin", "q", "L,min", "", "least specified live load of the use", "kPa"),
     ("w_sl", "w", "sl", "", "weight of the slab on the tributary width", "kN/m"),

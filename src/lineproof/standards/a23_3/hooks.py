@@ -1,0 +1,141 @@
+"""Clause 12.5: standard hooks in tension, A23.3-14 and A23.3:19.
+
+A23.3:24 has a new expression whose coefficients are not known here; it is refused.
+"""
+
+from __future__ import annotations
+
+from functools import partial
+
+from lineproof.errors import UserError
+from lineproof.formula import FROM_MEMORY, Formula, criterion, formula
+from lineproof.sheet import LookupTable
+from lineproof.standards.a23_3.notation import NOTATION
+from lineproof.standards.codes import CodePair
+
+_formula = partial(formula, notation=NOTATION)
+_criterion = partial(criterion, notation=NOTATION)
+
+COVER_FACTORS = LookupTable(
+    "Hooks: factor for cover, bars up to 35M",
+    "cover of the hook",
+    {"k_hc": ""},
+    {
+        "side cover 60 mm and tail cover 50 mm or more": {"k_hc": "0.7"},
+        "less": {"k_hc": "1.0"},
+    },
+    "A23.3, 12.5.3",
+    clause="12.5.3",
+    basis=FROM_MEMORY,
+)
+TIE_FACTORS = LookupTable(
+    "Hooks: factor for ties",
+    "ties around the hook",
+    {"k_ht": ""},
+    {
+        "ties at 3 bar diameters or closer": {"k_ht": "0.8"},
+        "none": {"k_ht": "1.0"},
+    },
+    "A23.3, 12.5.3",
+    clause="12.5.3",
+    basis=FROM_MEMORY,
+)
+DENSITY_FACTORS = LookupTable(
+    "Hooks: factor for density",
+    "density of concrete",
+    {"k_hd": ""},
+    {"normal": {"k_hd": "1.0"}, "semi-low": {"k_hd": "1.3"}, "low": {"k_hd": "1.3"}},
+    "A23.3, 12.5.3 (semi-low as low)",
+    clause="12.5.3",
+    basis=FROM_MEMORY,
+)
+COATING_FACTORS = LookupTable(
+    "Hooks: factor for coating",
+    "coating of the hook",
+    {"k_he": ""},
+    {"epoxy": {"k_he": "1.2"}, "none": {"k_he": "1.0"}},
+    "A23.3, 12.5.3",
+    clause="12.5.3",
+    basis=FROM_MEMORY,
+)
+
+BASIC = _formula(
+    "l_hb = 100*d_b/min(sqrt(f_c), 8)*f_y/400",
+    clause="12.5.2",
+    title="Basic development length of a hook",
+    basis=FROM_MEMORY,
+    numbers={"100": "MPa^0.5", "8": "MPa^0.5", "400": "MPa"},
+)
+L_DH = _formula(
+    "l_dh = max(k_hc*k_ht*k_hd*k_he*l_hb, 8*d_b, 150)",
+    unit="mm",
+    clause="12.5.1",
+    title="Development length of a hook",
+    basis=FROM_MEMORY,
+    numbers={"150": "mm"},
+)
+L_DH_EXCESS = _formula(
+    "l_dh = max(k_hc*k_ht*k_hd*k_he*min(A_sr/A_s, 1)*l_hb, 8*d_b, 150)",
+    unit="mm",
+    clause="12.5.3",
+    title="Development length of a hook, more steel than required",
+    basis=FROM_MEMORY,
+    numbers={"150": "mm"},
+)
+SIDE_COVERED = _criterion(
+    "60 <= c_side",
+    clause="12.5.3",
+    title="Side cover of the hook",
+    basis=FROM_MEMORY,
+    numbers={"60": "mm"},
+    yes="The side cover is at least 60 mm.",
+    no="The side cover is below 60 mm: no reduction for cover; ties where the beam ends.",
+    key="hook-side-cover",
+)
+TAIL_COVERED = _criterion(
+    "50 <= c_tail",
+    clause="12.5.3",
+    title="Cover on the tail of the hook",
+    basis=FROM_MEMORY,
+    numbers={"50": "mm"},
+    yes="The cover on the tail is at least 50 mm.",
+    no="The cover on the tail is below 50 mm: no reduction for cover.",
+    key="hook-tail-cover",
+)
+TIED = _criterion(
+    "s_tie <= 3*d_b",
+    clause="12.5.4",
+    title="Ties around hooks of small cover where the beam ends",
+    basis=FROM_MEMORY,
+    yes="The ties around the hooks are close enough.",
+    no="The ties around the hooks are NOT close enough.",
+    key="hook-ties",
+)
+FITS = _criterion(
+    "l_dh <= l_av",
+    clause="12.5.1",
+    title="Length for the hook",
+    basis=FROM_MEMORY,
+    yes="The hook fits.",
+    no="The hook does NOT fit: thinner bars, a deeper support or more bars.",
+    key="hook-fits",
+)
+
+
+def basic_length(pair: CodePair) -> Formula:
+    """Return the basic development length of a hook in the edition of the pair.
+
+    Raises :class:`UserError` for A23.3:24, whose expression is not known here.
+    """
+    if pair.concrete == "CSA A23.3:24":
+        raise UserError(
+            f"codes.pair: {pair.name!r}: hooks cannot be calculated: {pair.concrete} changed 12.5 "
+            "to a form with the bar diameter to the power 1.5, whose coefficients are not "
+            "known here; the earlier form can be too short. Anchor the bars straight"
+        )
+    return BASIC
+
+
+FORMULAS = (BASIC, L_DH, L_DH_EXCESS)
+CRITERIA = (SIDE_COVERED, TAIL_COVERED, TIED, FITS)
+TABLES = (COVER_FACTORS, TIE_FACTORS, DENSITY_FACTORS, COATING_FACTORS)
