@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.section_shape import BarRow, SectionShape, SlabBars
+from lineproof.beams.section_shape import BarRow, SectionShape, SkinBars, SlabBars
 from lineproof.drawing import (
     LIGHT,
     TEXT_SIZE,
@@ -156,6 +156,14 @@ def slab_bars(shape: SectionShape, shown: Shown, row: SlabBars) -> list[Circle]:
     return circles
 
 
+def skin_bars(shape: SectionShape, skin: SkinBars) -> list[Circle]:
+    """Draw the skin bars of both side faces, evenly over the height of their strip."""
+    step = skin.height / skin.count
+    heights = [skin.bottom + (number + 0.5) * step for number in range(skin.count)]
+    sides = (skin.side, shape.b_w - skin.side)
+    return [Circle((x, y), skin.diameter / 2, "bars") for y in heights for x in sides]
+
+
 def stirrup(
     shape: SectionShape, cover: float, diameter: float, radii: tuple[float, float]
 ) -> list[Shape]:
@@ -197,6 +205,7 @@ class _Content:
     bottom: Sequence[BarRow]
     top: Sequence[BarRow]
     slab: SlabBars | None = None
+    skin: SkinBars | None = None
 
     @property
     def edge(self) -> float:
@@ -205,7 +214,8 @@ class _Content:
 
     @property
     def labels(self) -> tuple[str, ...]:
-        return (*(row.label for row in (*self.bottom, *self.top)), self.stirrup_label)
+        skin = self.skin.label if self.skin else ""
+        return (*(row.label for row in (*self.bottom, *self.top)), self.stirrup_label, skin)
 
 
 def section_figure(
@@ -218,6 +228,7 @@ def section_figure(
     bottom: Sequence[BarRow] = (),
     top: Sequence[BarRow] = (),
     slab: SlabBars | None = None,
+    skin: SkinBars | None = None,
     centroid: float | None = None,
     caption: str = "Section",
     alt: str = "",
@@ -228,7 +239,7 @@ def section_figure(
     of the gross centroid below the top face. The alternative text is written from the numbers
     unless one is given.
     """
-    content = _Content(d, cover, stirrup_diameter, stirrup_label, bottom, top, slab)
+    content = _Content(d, cover, stirrup_diameter, stirrup_label, bottom, top, slab, skin)
     reach = (
         CALLOUT_REACH + 2.0 + max(text_width(words(label), TEXT_SIZE) for label in content.labels)
     )
@@ -290,7 +301,7 @@ def _steel(shape: SectionShape, shown: Shown, content: _Content) -> list[Shape]:
     links = stirrup(shape, content.cover, content.stirrup_diameter, (low, high)) if loop else []
     beside = slab_bars(shape, shown, content.slab) if content.slab else []
     rows = [*bars(shape, bottom, content.edge), *bars(shape, top, content.edge)]
-    return [*links, *rows, *beside]
+    return [*links, *rows, *beside, *(skin_bars(shape, content.skin) if content.skin else [])]
 
 
 def _note(shown: Shown, centre: float) -> Text:
@@ -328,6 +339,9 @@ def _callouts(shape: SectionShape, shown: Shown, content: _Content) -> list[Shap
     edge = content.edge
     top = [(row.label, (edge, shape.h - row.depth)) for row in content.top]
     low = [(row.label, (edge, shape.h - row.depth)) for row in content.bottom]
+    if content.skin:
+        target = (content.skin.side, content.skin.bottom + content.skin.height / 2)
+        low.append((content.skin.label, target))
     if content.stirrup_label:
         leg = edge - content.stirrup_diameter / 2
         low.append((content.stirrup_label, (leg, 0.4 * shape.h)))

@@ -6,13 +6,14 @@ from lineproof.beams.figure_capacity import MomentLevel, capacity_figure, stress
 from lineproof.beams.figure_loading import UniformLoad, loading_figure
 from lineproof.beams.figure_section import section_figure
 from lineproof.beams.figure_strain import Force, StressState, strain_stress_figure
-from lineproof.beams.section_shape import BarRow, SectionShape, SlabBars
+from lineproof.beams.section_shape import BarRow, SectionShape, SkinBars, SlabBars
 
 __all__ = [
     "BarRow",
     "Force",
     "MomentLevel",
     "SectionShape",
+    "SkinBars",
     "SlabBars",
     "StressState",
     "UniformLoad",

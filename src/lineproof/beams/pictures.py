@@ -8,6 +8,7 @@ from lineproof.beams.figures import (
     Force,
     MomentLevel,
     SectionShape,
+    SkinBars,
     SlabBars,
     StressState,
     capacity_figure,
@@ -51,7 +52,10 @@ def record_section_figure(
     """
     bars = sheet.entries_of("bars")
     cover, d_bs = sheet.entry("given/c_c"), bars["d_bs"]
-    rows, slab = _top_bars(sheet, top, cover.value + d_bs.value)
+    edge = cover.value + d_bs.value
+    counted = _entries(sheet, "compression-bars")
+    rows, slab, caption = _top_bars(sheet, counted or top, edge, "beside" if shape == "L" else "each side")
+    skin = _skin_bars(_entries(sheet, "crack-control"), sheet.find("h").value, bars["d"].value)
     figure = section_figure(
         section_shape(sheet, shape),
         d=bars["d"].value,
@@ -61,26 +65,44 @@ def record_section_figure(
         bottom=bottom_rows(bars, layers),
         top=rows,
         slab=slab,
-        caption="Section: bottom bars at midspan, top bars at the ends"
-        if rows
-        else "Section at midspan",
+        skin=skin,
+        caption=caption,
     )
-    _record(sheet, "section", figure, [cover, *bars.values(), *top.values()])
+    _record(sheet, "section", figure, [cover, *bars.values(), *(counted or top).values()])
+
+
+def _entries(sheet: Sheet, key: str) -> dict[str, Entry]:
+    """Return the entries of a part, none if it has not been recorded."""
+    return next((dict(part.entries) for part in sheet.parts if part.key == key), {})
 
 
 def _top_bars(
-    sheet: Sheet, top: dict[str, Entry], edge: float
-) -> tuple[list[BarRow], SlabBars | None]:
-    if "n_1" not in top:
-        return [], None
-    count, diameter, size = round(top["n_1"].value), top["d_b"].value, top["d_b"].source.row
+    sheet: Sheet, top: dict[str, Entry], edge: float, where: str
+) -> tuple[list[BarRow], SlabBars | None, str]:
+    """Return compression bars at midspan or else the bars of the ends, and what the figure shows."""
+    number = top.get("n_c", top.get("n_t"))
+    if number is None:
+        return [], None, "Section at midspan"
+    count, diameter, size = round(number.value), top["d_b"].value, top["d_b"].source.row
     depth = edge + diameter / 2
+    if "n_c" in top:
+        row = BarRow(count, diameter, depth, f"{count}-{size}, compression")
+        return [row], None, "Section at midspan"
     beside = round(top["n_o"].value) if "n_o" in top else 0
-    label = f"{count}-{size}" + (f" + {beside}-{size} each side" if beside else "")
-    row = BarRow(count, diameter, depth, label)
-    if not beside:
-        return [row], None
-    return [row], SlabBars(beside, diameter, depth, sheet.find("b_ot").value)
+    label = f"{count}-{size}" + (f" + {beside}-{size} {where}" if beside else "")
+    slab = SlabBars(beside, diameter, depth, sheet.find("b_ot").value) if beside else None
+    caption = "Section: bottom bars at midspan, top bars at the ends"
+    return [BarRow(count, diameter, depth, label)], slab, caption
+
+
+def _skin_bars(cracks: dict[str, Entry], h: float, d: float) -> SkinBars | None:
+    if "n_k" not in cracks:
+        return None
+    count, size = round(cracks["n_k"].value), cracks["d_bk"].source.row
+    return SkinBars(
+        count, cracks["d_bk"].value, cracks["d_sk"].value, 2 * (h - d), cracks["h_sk"].value,
+        f"{count}-{size} each face",
+    )  # fmt: skip
 
 
 def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:

@@ -36,6 +36,21 @@ class BarRow:
 
 
 @dataclass(frozen=True, slots=True)
+class SkinBars:
+    """Skin bars of each side face: ``side`` to their centres, spread over ``height``, mm.
+
+    ``bottom`` is the height of the lower end of the strip above the soffit.
+    """
+
+    count: int
+    diameter: float
+    side: float
+    bottom: float
+    height: float
+    label: str
+
+
+@dataclass(frozen=True, slots=True)
 class SlabBars:
     """Top bars in each overhang, spread over ``width`` from the face of the web, mm."""
 

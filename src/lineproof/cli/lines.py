@@ -15,6 +15,7 @@ from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, VALUES
 from lineproof.typeset import printable
 
+LARGEST_FILE = 64_000_000
 _COMMON = ("id", "label", "kind", "symbol", "title", "clause", "basis")
 _OWN = ("typed", "source", "table", "row", "numbers", "procedure", "settings", "closing", "holds",
         "left", "right", "utilisation", "conclusion", "exception", "printed", "digest")  # fmt: skip
@@ -56,20 +57,29 @@ def _from_notebook(path: Path) -> list[Record]:
     return [record_of(cells_of(load_notebook(path), str(path)), str(path))]
 
 
+def _content(path: Path) -> bytes:
+    """Read a file, never more than a package could hold."""
+    with path.open("rb") as stream:
+        content = stream.read(LARGEST_FILE + 1)
+    if len(content) > LARGEST_FILE:
+        raise UserError(f"{path}: larger than {LARGEST_FILE // 1_000_000} MB; not read")
+    return content
+
+
 def _from_pdf(path: Path) -> list[Record]:
     from lineproof.package import records_in_pdf  # noqa: PLC0415
 
-    return [Record.from_data(data) for data in records_in_pdf(path.read_bytes())]
+    return [Record.from_data(data) for data in records_in_pdf(_content(path))]
 
 
 def _from_html(path: Path) -> list[Record]:
     from lineproof.package import records_in_html  # noqa: PLC0415
 
-    return [Record.from_data(data) for data in records_in_html(path.read_text(encoding="utf-8"))]
+    return [Record.from_data(data) for data in records_in_html(_content(path).decode())]
 
 
 def _from_json(path: Path) -> list[Record]:
-    return [Record.from_text(path.read_text(encoding="utf-8"))]
+    return [Record.from_text(_content(path).decode())]
 
 
 def as_json(records: Iterable[Record]) -> dict[str, Any]:

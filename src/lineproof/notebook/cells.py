@@ -58,6 +58,8 @@ def check_format(data: object, name: str) -> None:
     """Refuse what is not a notebook of format 4."""
     if not isinstance(data, Mapping) or not isinstance(data.get("cells", []), list):
         raise UserError(f"{name}: not a notebook; give a file that Jupyter has saved")
+    if not isinstance(data.get("metadata", {}), Mapping) or not _can_be_saved(data.get("metadata")):
+        raise UserError(f"{name}: its metadata are damaged; open it in JupyterLab and save it")
     if data.get("nbformat") != _FORMAT or "cells" not in data:
         given = str(data.get("nbformat", "none"))[:20]
         raise UserError(
@@ -88,16 +90,32 @@ def _cell(number: int, raw: Mapping[str, Any]) -> Cell:
     for output in outputs:
         if not isinstance(output["output_type"], str) or not isinstance(_data(output), Mapping):
             raise TypeError
+        if not isinstance(output.get("metadata", {}), Mapping):
+            raise TypeError
+    if not all(isinstance(held, Mapping) for held in dict(raw.get("attachments", {})).values()):
+        raise TypeError
+    source = joined(raw["source"])
+    if not _can_be_saved([source, raw.get("metadata")]):
+        raise ValueError
     tags = raw.get("metadata", {}).get("tags", ())
     count = raw.get("execution_count")
     return Cell(
         number,
         kind,
-        joined(raw["source"]),
+        source,
         tuple(map(str, tags)),
         outputs,
         count if isinstance(count, int) else None,
     )
+
+
+def _can_be_saved(data: object) -> bool:
+    """Tell whether data can be written as text; a lone half of a character cannot."""
+    try:
+        json.dumps(data, ensure_ascii=False).encode()
+    except (UnicodeEncodeError, RecursionError):
+        return False
+    return True
 
 
 def joined(text: str | list[str]) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from lineproof.typeset.chains import Chain
+from lineproof.typeset.glyphs import printable
 from lineproof.typeset.measure import broken, shrink, width
 from lineproof.typeset.nodes import Math
 from lineproof.typeset.plain import plain
@@ -77,8 +78,9 @@ def cut(text: str, longest: int) -> str:
     'Gallery…'
     """
     used = 0.0
-    for place, letter in enumerate(text):
+    shown = printable(text)  # one character may be printed as its code of nine
+    for place, letter in enumerate(shown):
         used += _WIDE if letter in "MWmw@%" else _CAPITAL if letter.isupper() else _OTHER
         if used > longest:
-            return text[: max(place - 1, 1)].rstrip() + "…"
+            return shown[: max(place - 1, 1)].rstrip() + "…"
     return text

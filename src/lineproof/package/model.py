@@ -160,14 +160,11 @@ def build_package(
         walk = walks[place] if walks is not None else None
         prefix = f"{_slug(record['calc']['id'])}/" if len(data) > 1 else ""
         calcs.append(_Builder(record, prefix, marks or {}, faults).calc(walk))
-    first = data[0]
-    facts = project_facts(first["project"], first["codes"])
+    facts = project_facts(data[0]["project"], data[0]["codes"])
     _check_status(facts.status, calcs, faults)
     faults.raise_if_any()
     return Package(
-        title=calcs[0].title
-        if len(calcs) == 1
-        else first["project"].get("project", {}).get("name", ""),
+        title=calcs[0].title if len(calcs) == 1 else facts.name,
         facts=facts,
         calcs=tuple(calcs),
         notation=notation_rows(data),

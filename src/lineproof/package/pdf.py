@@ -11,6 +11,7 @@ from functools import cache
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+from lineproof.errors import UserError
 from lineproof.package.environment import Interned, Verbatim, typst_environment
 from lineproof.package.figures import drawing, paper_width
 from lineproof.package.model import Package
@@ -22,6 +23,7 @@ if TYPE_CHECKING:
 
 MIME = "application/vnd.lineproof.record+json"
 STANDARDS = ["a-3a", "ua-1"]
+_TOO_LONG = "PDF string is longer than"
 _local = threading.local()
 
 
@@ -72,6 +74,11 @@ def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
             timestamp=moment,
         )
     except typst.TypstError as error:
+        if _TOO_LONG in error.message:
+            raise UserError(
+                "a title, a heading or a word has more than 32767 characters, which a PDF cannot "
+                "hold; shorten it"
+            ) from None
         raise PrintError(f"Typst: {error.message}\n{error.diagnostic}") from error
     if warnings:
         raise PrintError("Typst: " + "; ".join(warning.message for warning in warnings))

@@ -122,6 +122,8 @@ class _Tokens:
                 return (Mark("code" if kind == "codespan" else "listing", text),)
             case "heading":
                 level = int(token["attrs"]["level"])
+                if not children:
+                    return self._empty_heading(level)
                 return (Mark("heading", children=self.marks(children, depth), level=level),)
             case "list":
                 ordered = "numbered" if token["attrs"]["ordered"] else "list"
@@ -162,6 +164,10 @@ class _Tokens:
             self.faults.add(f"prose: raw HTML {raw!r} is not printed; write it in Markdown")
         else:
             self.faults.add(f"prose: {kind.replace('_', ' ')} {raw!r} is not printed; leave it out")
+        return ()
+
+    def _empty_heading(self, level: int) -> tuple[Mark, ...]:
+        self.faults.add(f"prose: heading {'#' * level} has no words; write them or leave it out")
         return ()
 
     def _text(self, raw: str) -> tuple[Mark, ...]:

@@ -4,26 +4,40 @@ from __future__ import annotations
 
 import io
 import json
+import logging
 import re
+from collections.abc import Iterator
+from contextlib import contextmanager
 from typing import Any
 
 from lineproof.errors import UserError
 
 LARGEST_RECORD = 32_000_000
+_TAIL = 65_536
 _MIME = "application/vnd.lineproof.record+json"
-_SCRIPT = re.compile(
-    rf'<script type="{re.escape(_MIME)}"[^>]*>(.*?)</script>', re.DOTALL | re.IGNORECASE
-)
+_OPENED = re.compile(rf'<script type="{re.escape(_MIME)}"[^<>]*>', re.IGNORECASE)
+_CLOSED = re.compile(r"</script>", re.IGNORECASE)
 _SUFFIX = ".lineproof.json"
 _PLACE = re.compile(r"Record (\d{1,4}) of ")
 
 
 def records_in_html(text: str) -> list[dict[str, Any]]:
     """Return the records inside an HTML package, in order; raises :class:`UserError`."""
-    found = [_record(match[1], f"record {n}") for n, match in enumerate(_SCRIPT.finditer(text), 1)]
+    found = [_record(script, f"record {n}") for n, script in enumerate(_scripts(text), 1)]
     if not found:
         raise UserError("no record in this HTML file; give a package that lineproof has printed")
     return _each_once(found)
+
+
+def _scripts(text: str) -> Iterator[str]:
+    """Yield what stands in the record scripts; one pass, whatever the page holds."""
+    place = 0
+    while (opened := _OPENED.search(text, place)) is not None:
+        closed = _CLOSED.search(text, opened.end())
+        if closed is None:
+            raise UserError("the record in this HTML file is cut short; give the whole file")
+        yield text[opened.end() : closed.start()]
+        place = closed.end()
 
 
 def records_in_pdf(content: bytes) -> list[dict[str, Any]]:
@@ -49,10 +63,13 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
     import pypdf  # noqa: PLC0415 - only reading a PDF needs it
     import pypdf.errors  # noqa: PLC0415
 
+    if b"startxref" not in content[-_TAIL:]:  # else the reader searches it all, line by line
+        raise UserError("this PDF cannot be read, its end is missing; give the whole file")
     try:
-        reader = pypdf.PdfReader(io.BytesIO(content))
-        order = _printed_order(reader)
-        found = [(name, part) for name, parts in reader.attachments.items() for part in parts]
+        with _silent("pypdf"):
+            reader = pypdf.PdfReader(io.BytesIO(content))
+            order = _printed_order(reader)
+            found = [(name, part) for name, parts in reader.attachments.items() for part in parts]
         return sorted(found, key=lambda pair: order.get(pair[0], len(order)))
     except pypdf.errors.FileNotDecryptedError:
         raise UserError("this PDF is encrypted; give it without a password") from None
@@ -60,6 +77,18 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
     except Exception as error:  # noqa: BLE001
         reason = f"{type(error).__name__}: {error}"[:80]
         raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
+
+
+@contextmanager
+def _silent(name: str) -> Iterator[None]:
+    """Keep a library from writing its warnings between our own sentences."""
+    logger = logging.getLogger(name)
+    level = logger.level
+    logger.setLevel(logging.CRITICAL + 1)
+    try:
+        yield
+    finally:
+        logger.setLevel(level)
 
 
 def _printed_order(reader: Any) -> dict[str, int]:

@@ -10,6 +10,7 @@ from pathlib import Path
 from typing import Any
 
 from lineproof.errors import UserError
+from lineproof.record.plain_data import LARGEST_INTEGER
 
 KNOWN: dict[str, tuple[str, ...]] = {
     "project": ("name", "number", "address", "client"),
@@ -25,6 +26,7 @@ KNOWN: dict[str, tuple[str, ...]] = {
 }
 """The facts of a project by table; ``criteria`` holds whatever the office wants to state."""
 LARGEST_FILE = 1_000_000
+DEEPEST = 3
 
 
 def read_project(path: Path) -> dict[str, Any]:
@@ -33,17 +35,43 @@ def read_project(path: Path) -> dict[str, Any]:
     Raises :class:`UserError` that names file, line and what to write.
     """
     try:
-        if path.stat().st_size > LARGEST_FILE:
+        with path.open("rb") as stream:
+            content = stream.read(LARGEST_FILE + 1)
+        if len(content) > LARGEST_FILE:
             raise UserError(f"{path}: larger than 1 MB; a project file holds facts only")
-        data = tomllib.loads(path.read_text(encoding="utf-8"))
+        data = tomllib.loads(content.decode("utf-8-sig"))  # some editors put a mark in front
     except (OSError, UnicodeDecodeError) as error:
         reason = getattr(error, "strerror", None) or "not UTF-8 text"
         raise UserError(f"{path}: the project file cannot be read ({reason})") from None
-    except tomllib.TOMLDecodeError as error:
+    except (ValueError, RecursionError) as error:
+        if isinstance(error, UserError):
+            raise
         raise UserError(f"{path}: not valid TOML: {error}") from None
+    _check_values(path, data)
     facts: dict[str, Any] = _plain(data)
     _check_facts(path, facts)
     return facts
+
+
+def _check_values(path: Path, data: dict[str, Any]) -> None:
+    """Refuse what a record cannot hold, by the name it has in the file."""
+    faults = []
+    waiting: list[tuple[str, object, int]] = [("", data, 0)]
+    while waiting:
+        name, value, depth = waiting.pop()
+        inside = (
+            value.items() if isinstance(value, dict)
+            else enumerate(value, 1) if isinstance(value, list)
+            else ()
+        )  # fmt: skip
+        if inside and depth == DEEPEST:
+            faults.append(f"{path}: {name[:60]} is nested too deeply; write plain texts")
+        elif inside:
+            waiting += [(f"{name}.{key}".lstrip("."), item, depth + 1) for key, item in inside]
+        elif isinstance(value, int | float) and not abs(value) <= LARGEST_INTEGER:
+            faults.append(f"{path}: {name[:60]} is no number that can be kept; write it as a text")
+    if faults:
+        raise UserError(sorted(faults))
 
 
 def _plain(value: object) -> Any:
@@ -57,7 +85,7 @@ def _plain(value: object) -> Any:
 
 
 def _check_facts(path: Path, facts: dict[str, Any]) -> None:
-    tables = ("project", "firm", "codes", "building", "location", "issue", "paper")
+    tables = ("project", "firm", "codes", "building", "location", "issue", "paper", "criteria")
     faults = [
         f"{path}: {table!r} must be a table; write [{table}]"
         for table in tables
@@ -70,6 +98,8 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
     faults += _unknown(path, facts)
     if not isinstance(facts.get("codes"), dict) or "pair" not in facts["codes"]:
         faults.append(f"{path}: no code pair; write under [codes]: pair = 'NBC 2015 + A23.3-14'")
+    elif not isinstance(facts["codes"]["pair"], str):
+        faults.append(f"{path}: codes.pair is no text; write pair = 'NBC 2015 + A23.3-14'")
     if faults:
         raise UserError(faults)
 

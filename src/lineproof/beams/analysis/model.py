@@ -250,9 +250,9 @@ def _check_widths(beam: Beam, faults: FaultList) -> None:
             faults.add(f"support {number}: a free end has no width; leave it out")
             bad.add(number)
     for number, (left, right) in enumerate(pairwise(beam.supports), start=1):
-        if bad & {number, number + 1}:
-            continue
         length = beam.spans[number - 1].length
+        if bad & {number, number + 1} or not length > 0:
+            continue
         for at, support in ((number, left), (number + 1, right)):
             if support.width > length:
                 faults.add(

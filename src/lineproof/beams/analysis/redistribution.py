@@ -39,12 +39,12 @@ def redistribute(
     """
     beam = solved.solution.beam
     _check(beam, reductions, limits)
-    keep = np.ones(len(solved.cases), dtype=bool)
+    chosen = np.ones(len(solved.cases), dtype=bool)
     if only is not None:
-        keep = ~np.isin(np.arange(len(solved.cases)), sorted(only))
+        chosen = np.isin(np.arange(len(solved.cases)), sorted(only))
     spans = list(solved.solution.spans)
     for support, percent in reductions.items():
-        _change(spans, support, np.where(keep, 0.0, percent / 100))
+        _change(spans, support, np.where(chosen, percent / 100, 0.0))
     reactions, couples = support_forces(beam, spans)
     rotations = np.full_like(solved.solution.rotations, np.nan)
     solution = replace(
