@@ -266,3 +266,13 @@ def test_a_replaced_file_keeps_its_permissions(tmp_path: Path) -> None:
     assert path.read_bytes() == b"new"
     assert path.stat().st_mode & 0o777 == 0o640
     assert [p.name for p in tmp_path.iterdir()] == ["beam.ipynb"]
+
+
+@pytest.mark.parametrize("kind", ["json", "html", "pdf", "ipynb"])
+def test_a_file_without_end_is_not_read_to_its_end(
+    kind: str, tmp_path: Path, capsys: Capture
+) -> None:
+    path = tmp_path / f"endless.{kind}"
+    path.symlink_to("/dev/zero")
+    assert main(["lines", str(path)]) == 2
+    assert capsys.readouterr().err == f"{path}: larger than 64 MB; not read\n"

@@ -178,6 +178,22 @@ def test_update_takes_over_a_calc_whose_last_run_failed(beam: Notebook, tmp_path
     assert main(["issue", str(path), "--update"]) == 0
 
 
+def test_update_writes_through_a_link(beam: Notebook, tmp_path: Path) -> None:
+    path = edited(beam, tmp_path)
+    link = tmp_path / "link.ipynb"
+    link.symlink_to(path)
+    assert main(["issue", str(link), "--update"]) == 0
+    assert link.is_symlink()
+    assert main(["recheck", str(path)]) == 0
+
+
+def test_a_folder_name_that_no_disk_can_hold(
+    beam_file: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    arguments = ["issue", str(beam_file), "--into", str(beam_file.parent / ("a" * 300))]
+    assert "choose another folder with --into" in refused(arguments, capsys)
+
+
 def without_parameters(notebook: Notebook) -> None:
     notebook["cells"][2]["metadata"] = {}
 

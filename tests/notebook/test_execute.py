@@ -2,7 +2,9 @@ from __future__ import annotations
 
 import json
 import os
+import signal
 import sys
+import threading
 from pathlib import Path
 from typing import Any
 
@@ -100,3 +102,25 @@ def test_another_exception_is_named_in_one_line(unrun: Notebook, tmp_path: Path)
 def test_a_python_that_dies_is_named(unrun: Notebook, tmp_path: Path) -> None:
     (fault,) = faults_of(with_code(unrun, "import os; os._exit(3)"), tmp_path)
     assert fault.startswith("beam.ipynb: Python stopped while running it (")
+
+
+def test_what_is_printed_is_joined_in_one_pass(unrun: Notebook, tmp_path: Path) -> None:
+    """Of a line written over, as a progress bar is, the last stays; a long line takes no time."""
+    code = (
+        "import sys; print('1 %\\r2 %\\r3 %\\r\\nend', flush=True); "
+        "print('e', file=sys.stderr, flush=True); print('x' * 3_000_000)"
+    )
+    first, second = run(with_code(unrun, code), tmp_path)["cells"][-1]["outputs"]
+    assert "".join(first["text"]) == "3 %\nend\n" + "x" * 3_000_000 + "\n"
+    assert (second["name"], second["text"]) == ("stderr", ["e\n"])
+
+
+@pytest.mark.skipif(os.name != "posix", reason="signals of POSIX")
+def test_a_cell_that_never_ends_is_stopped_by_the_keyboard(
+    unrun: Notebook, tmp_path: Path
+) -> None:
+    timer = threading.Timer(3, os.kill, (os.getpid(), signal.SIGINT))
+    timer.start()
+    with pytest.raises(KeyboardInterrupt):
+        execute(with_code(unrun, "while True: pass"), "beam.ipynb", tmp_path)
+    timer.join()

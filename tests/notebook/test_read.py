@@ -147,6 +147,18 @@ def part_run_again(notebook: Notebook) -> None:
     outputs(notebook, FLEXURE)[0]["metadata"][METADATA]["part"] = "0" * 16
 
 
+def half_a_character(notebook: Notebook) -> None:
+    notebook["cells"][2]["source"] += "\nx = '\ud800'"
+
+
+def damaged_metadata(notebook: Notebook) -> None:
+    outputs(notebook, GIVENS)[0]["metadata"] = [1]
+
+
+def damaged_attachments(notebook: Notebook) -> None:
+    notebook["cells"][0]["attachments"] = {"a.png": [1]}
+
+
 def run_out_of_order(notebook: Notebook) -> None:
     first, second = outputs(notebook, GIVENS)[0], outputs(notebook, FLEXURE)[0]
     notebook["cells"][GIVENS]["outputs"] = [second]
@@ -171,6 +183,9 @@ def run_out_of_order(notebook: Notebook) -> None:
         (input_run_again, "was run again after what stands below it"),
         (cell_put_in, "cell 4 (f_y = 1) has not been run"),
         (part_run_again, "shows part 'flexure' otherwise than the record holds it"),
+        (half_a_character, "cell 3 is damaged"),
+        (damaged_metadata, "is damaged; open the notebook in JupyterLab"),
+        (damaged_attachments, "cell 1 is damaged"),
         (run_out_of_order, "were not run in the order of the cells"),
     ],
 )
@@ -217,6 +232,8 @@ def test_outputs_without_metadata_are_taken_as_they_are(beam: Notebook) -> None:
         (b'{"worksheets": [], "nbformat": 3}', "notebook format 3 is not read"),
         (b'{"cells": [7], "nbformat": 4}', "cell 1 is damaged"),
         (b'{"cells": [{"cell_type": "code"}], "nbformat": 4}', "cell 1 is damaged"),
+        (b'{"cells": [], "metadata": [1], "nbformat": 4}', "metadata are damaged"),
+        (b'{"cells": [], "metadata": {"a": "\\ud800"}, "nbformat": 4}', "metadata are damaged"),
     ],
 )
 def test_what_is_no_notebook_is_refused(tmp_path: Path, content: bytes, said: str) -> None:

@@ -79,13 +79,18 @@ def test_nothing_to_print_is_an_error() -> None:
 def test_facts_survive_a_project_of_another_shape() -> None:
     """Odd TOML content prints as what it is or as an empty line."""
     facts = project_facts(
-        {"project": "x", "drawings": {"number": 201}, "issue": {"status": ["a", 1]}, "firm": None},
+        {
+            "project": "x",
+            "drawings": {"number": 201},
+            "issue": {"superseded": ["a", 1]},
+            "firm": None,
+        },
         {"pair": "NBC 2015 + A23.3-14"},
     )
 
     assert facts.name == ""
     assert facts.drawings[0].number == "201"
-    assert facts.status == "a, 1"
+    assert facts.superseded == "a, 1"
     assert [fact.value for fact in facts.facts if fact.label == "Codes"] == ["NBC 2015 + A23.3-14"]
 
 
@@ -93,6 +98,8 @@ def test_running_heads_are_cut() -> None:
     """An ellipsis shows that something is missing."""
     assert cut("short", 10) == "short"
     assert cut("a" * 20, 10) == "a" * 9 + "…"
+    assert cut("梁" * 3, 10) == "<U+6881>…"  # as long as it is printed
+    assert cut("e\u0301", 10) == "e\u0301"
     assert len(cut("W" * 60, 56)) < 34
 
 

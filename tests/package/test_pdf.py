@@ -202,6 +202,22 @@ def test_a_title_of_ten_thousand_characters_is_printed_whole(record: Record) -> 
         assert all(right_edge(page) <= 612 for page in reader.pages)
 
 
+def test_a_word_longer_than_a_pdf_can_hold_is_refused(record: Record) -> None:
+    """PDF/A bounds a string at 32767 bytes."""
+    record["parts"][0]["title"] = "word " * 7000
+    with pytest.raises(UserError, match="more than 32767 characters"):
+        printed(record)
+
+
+def test_several_calcs_take_the_name_of_the_project(record: Record) -> None:
+    """Also when the file holds a number there."""
+    record["project"]["project"]["name"] = 2611
+    other = {**record, "calc": {"id": "B8", "title": "Other"}}
+    reader = pypdf.PdfReader(io.BytesIO(printed(record, other)))
+    assert reader.metadata is not None
+    assert reader.metadata.title == "2611"
+
+
 def right_edge(page: pypdf.PageObject) -> float:
     """Return how far right the text of a page reaches, in points, by the steps of its lines."""
     starts: list[float] = []

@@ -50,6 +50,8 @@ def test_a_name_in_code_stays_as_written() -> None:
         ("a <b>x</b>", "raw HTML '<b>' is not printed"),
         ("<script>x</script>", "raw HTML '<script>x</script>'"),
         ("![x](y.png)", "image"),
+        ("text\n\n# \n", "heading # has no words"),
+        ("- > ##", "heading ## has no words"),
     ],
 )
 def test_what_is_not_printed_is_reported(prose: str, said: str) -> None:

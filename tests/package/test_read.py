@@ -40,6 +40,8 @@ def test_both_files_carry_the_record(record: dict[str, Any]) -> None:
     [
         (b"", "cannot be read"),
         (b"%PDF-1.7\ngarbage", "cannot be read"),
+        (b"%PDF-1.7\n" + b"1 0 obj\n" * 4_000_000, "its end is missing"),
+        (b"%PDF-1.7\nstartxref\n5\n%%EOF", "it is damaged"),
         (pdf_with(), "no record is attached"),
         (pdf_with(("notes.txt", b"{}")), "no record is attached"),
         (pdf_with(("B7.lineproof.json", b"{")), "'B7.lineproof.json' is damaged: not readable"),
@@ -66,6 +68,8 @@ def test_pdf_that_carries_no_good_record(content: bytes, said: str) -> None:
         (SCRIPT.format("{"), "record 1 is damaged"),
         (SCRIPT.format("[" * 100_000), "record 1 is damaged"),
         (SCRIPT.format("3"), "not a record"),
+        (SCRIPT.format("{}")[:-9] * 100_000, "is cut short"),  # one pass, not one for each
+        ('<script type="application/vnd.lineproof.record+json" ' * 100_000, "no record in this"),
         (SCRIPT.format('{"calc": {"id": "B7"}}') * 2, "two records of calc 'B7'"),
     ],
 )
@@ -96,3 +100,10 @@ def test_records_keep_their_order(record: dict[str, Any]) -> None:
 
     assert json.dumps(records_in_pdf(to_pdf(package))) == json.dumps(many)
     assert records_in_html(to_html(package)) == many
+
+
+def test_a_damaged_pdf_is_told_once(caplog: pytest.LogCaptureFixture) -> None:
+    """The reader's own warnings do not stand between our sentences."""
+    with pytest.raises(UserError, match="it is damaged"):
+        records_in_pdf(b"garbage\nstartxref\n5\n")
+    assert not caplog.records

@@ -1,7 +1,7 @@
 """The independent hand checks nos. 1 to 7 and 14: hand calculations on inputs of their own.
 
 Base beam unless noted: b = b_w = 350, h = 600, d = 535, A_s = 2000 (4-25M), f'c = 35, f_y = 400,
-lambda = 1, cover 40, 10M stirrups. No. 3 (live-load reduction) belongs to loads not covered yet.
+lambda = 1, cover 40, 10M stirrups. The others stand in test_independent_beam_checks.py.
 """
 
 from __future__ import annotations

@@ -9,7 +9,7 @@ CHECK_3 = "hand calculation, independent check no. 3"
 CHECK_11 = "hand calculation, independent check no. 11"
 CHECK_15 = "hand calculation, independent check no. 15"
 DLS = {"w_D": 12.4, "w_L": 9, "w_S": 6.5}
-D, DL, DS = {"w_D": 12.4}, {"w_D": 12.4, "w_L": 9}, {"w_D": 12.4, "w_S": 6.5}
+DL, DS = {"w_D": 12.4, "w_L": 9}, {"w_D": 12.4, "w_S": 6.5}
 LOADS = (
     W("combinations.CASE_2_SNOW", DLS, "1.25*12.4 + 1.5*9 + 1.0*6.5 = 35.50", CHECK_2),
     W("combinations.CASE_2_COUNTERACTING", DL, "0.9*12.4 + 1.5*9 = 11.16 + 13.5 = 24.66"),
@@ -76,7 +76,7 @@ ANALYSIS = (
 N = {"n_E": 7.51258, "A_s": 2000, "d": 535}
 # T: b 900, b_w 300, h_f 100, d 600, A_s 7000, n 8: n A_s = 56000; first moments about the axis:
 # 600*100*(x - 50) + 150 x^2 = 56000*(600 - x): 150 x^2 + 116000 x - 36 600 000 = 0, x 240.64
-TEE = {"b": 900, "b_w": 300, "h_f": 100, "n_E": 8, "A_s": 7000, "d": 600}
+TEE: dict[str, float] = {"b": 900, "b_w": 300, "h_f": 100, "n_E": 8, "A_s": 7000, "d": 600}
 STAGE = {"delta_DL": 14.0, "delta_sus": 8.0}
 DEFLECTION = (
     W("deflection.STEEL_MODIFIER", {"f_y": 500}, "0.4 + 500/670 = 1.14627"),

@@ -175,7 +175,7 @@ LONGITUDINAL = (
     W("shear_bars.AREA_END_SUPPORT", {**S, "F_le": 222.9}, "222900/340 = 656", CHECK_9 + "b"),
     W("shear_bars.HANGERS", {**S, "R_f": 204}, "204000/(0.85*400) = 600"),
 )
-SIDES = {"b_w": 350, "h": 600}
+SIDES: dict[str, float] = {"b_w": 350, "h": 600}
 COVER = {**SIDES, "c_c": 40, "d_bs": 11.3}
 TORSION = (
     W("torsion.AREA_RECTANGLE", SIDES, "350*600 = 210000", CHECK_10),

@@ -80,7 +80,7 @@ def test_empirical_numbers_are_named_with_their_units() -> None:
         NOTATION,
     )  # fmt: skip
 
-    assert row.remarks == ("Numbers of the formula: 4500 in √MPa.",)
+    assert row.remarks == ("Units of the constants: 4500 in √MPa.",)
     assert row.basis == ""
 
 
@@ -144,7 +144,7 @@ def test_givens_and_lookups_name_their_source() -> None:
     )  # fmt: skip
 
     assert given.remarks == ("Typed as 5.5\u202fin.", "Source: drawing A-210.")
-    assert lookup.remarks == ("From slabs, row S1.", "Source: schedule.")
+    assert lookup.remarks == ("Table: slabs, row S1.", "Source: schedule.")
 
 
 def test_a_found_value_names_procedure_arguments_and_closing_criterion() -> None:
@@ -157,7 +157,7 @@ def test_a_found_value_names_procedure_arguments_and_closing_criterion() -> None
         NOTATION,
     )  # fmt: skip
 
-    assert row.text == "Found by bisection (root, version 2), with"
+    assert row.text == "Found by bisection (version 2), with"
     assert [plain(m) for m in row.inputs] == ["f'c = 32 MPa", "M_r = 557 x 10^6 N.mm"]
     assert texts(row) == ["a = 26.10 mm <= h_f = 140 mm"]
 

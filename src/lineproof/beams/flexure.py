@@ -191,8 +191,9 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
         )
     in_flange = shape == "rectangular" or bool(steps.decide(double.STAYS_IN_FLANGE))
     closing = double.CLOSES if in_flange else double.CLOSES_TEE
+    zone = "rectangle" if shape == "rectangular" else "tee"
     steps.found(
-        "c", strain.AXIS["rectangle" if shape == "rectangular" else "tee", "compression bars"], closing, unit="mm", clause="10.1.1",
+        "c", strain.AXIS[zone, "compression bars"], closing, unit="mm", clause="10.1.1",
         title="Depth of the neutral axis, by equilibrium",
     )  # fmt: skip
     steps.lines(double.STRESS, double.FORCE, double.BLOCK)

@@ -54,7 +54,9 @@ def record_section_figure(
     cover, d_bs = sheet.entry("given/c_c"), bars["d_bs"]
     edge = cover.value + d_bs.value
     counted = _entries(sheet, "compression-bars")
-    rows, slab, caption = _top_bars(sheet, counted or top, edge, "beside" if shape == "L" else "each side")
+    rows, slab, caption = _top_bars(
+        sheet, counted or top, edge, "beside" if shape == "L" else "each side"
+    )
     skin = _skin_bars(_entries(sheet, "crack-control"), sheet.find("h").value, bars["d"].value)
     figure = section_figure(
         section_shape(sheet, shape),
@@ -79,7 +81,7 @@ def _entries(sheet: Sheet, key: str) -> dict[str, Entry]:
 def _top_bars(
     sheet: Sheet, top: dict[str, Entry], edge: float, where: str
 ) -> tuple[list[BarRow], SlabBars | None, str]:
-    """Return compression bars at midspan or else the bars of the ends, and what the figure shows."""
+    """Return compression bars at midspan, or else the bars of the ends, and the caption."""
     number = top.get("n_c", top.get("n_t"))
     if number is None:
         return [], None, "Section at midspan"

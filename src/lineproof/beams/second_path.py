@@ -36,8 +36,8 @@ def record_proof(
         "M_l", strain.MOMENT[key], moment, unit="kN.m", clause="10.1",
         title="Moment resistance, by layers and strains",
     )  # fmt: skip
-    resistance = "M_rb" if proved is strain.PROVED_BALANCED else "M_r"
-    steps.check(proved, **{resistance: M_r})
+    steps.bind(M_r=M_r, M_rb=M_r)
+    steps.check(proved)
 
 
 def record_parabola(steps: Steps, key: strain.Key) -> None:

@@ -38,7 +38,8 @@ def record_free_ends(sheet: Sheet) -> None:
     with sheet.part(TOP_STEEL, TITLE):
         sheet.note(
             "free-ends",
-            "The ends rest freely: no moment arises there; the bars that hold the stirrups are not part of this calculation.",
+            "The ends rest freely: no moment arises there; the bars that hold the stirrups are "
+            "not part of this calculation.",
             title="Ends",
             basis="common practice",
         )

@@ -31,7 +31,7 @@ def run(options: argparse.Namespace) -> int:
     progress.step(f"printing {folder}")
     files = _files(reruns, folder, options.paper)
     if options.update:
-        files |= {rerun.path: rerun.text.encode() for rerun in reruns}
+        files |= {rerun.path.resolve(): rerun.text.encode() for rerun in reruns}
     write_all(files)
     return _report(reruns, files)
 
@@ -42,7 +42,11 @@ def _check_names(paths: Sequence[Path], folder: Path) -> None:
     twice = sorted({stem for stem in stems if stems.count(stem) > 1})
     if twice:
         raise UserError(f"two notebooks are called {twice[0]!r}; issue them into two folders")
-    standing = next(place for place in (folder, *folder.absolute().parents) if place.exists())
+    try:
+        standing = next(place for place in (folder, *folder.absolute().parents) if place.exists())
+    except OSError as error:  # a name too long for the file system
+        shown = f"{str(folder)[:60]}…"
+        raise UserError(f"{shown}: {error.strerror}; choose another folder with --into") from None
     if not standing.is_dir():
         raise UserError(f"{standing}: is a file, not a folder; choose another with --into")
     if not os.access(standing, os.W_OK):

@@ -65,13 +65,18 @@ def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progre
         notebook,
         timeout=None,
         record_timing=False,
-        coalesce_streams=True,
         resources={"metadata": {"path": str(folder)}},
         on_cell_executed=tell,
     )
     # The user's own start-up files of IPython must not change a calculation.
     with log.open("wb") as stderr:
-        client.execute(env=os.environ | {"IPYTHONDIR": str(scratch)}, stderr=stderr)
+        try:
+            client.execute(env=os.environ | {"IPYTHONDIR": str(scratch)}, stderr=stderr)
+        except AssertionError:
+            if client.km is not None:
+                raise
+            # Stopped by a signal: the client has ended the kernel and misses it afterwards.
+            raise KeyboardInterrupt from None
 
 
 def _kernel_manager(scratch: Path) -> Any:
@@ -114,10 +119,35 @@ def _cleared(data: Mapping[str, Any]) -> dict[str, Any]:
     return {"cells": cells, "metadata": metadata, "nbformat": 4, "nbformat_minor": 5}
 
 
+def _join_streams(outputs: list[Any]) -> list[Any]:
+    """Join what a cell printed, which arrives in pieces of chance; of a line rewritten, the last.
+
+    Jupyter's own way takes the square of a line's length.
+    """
+    joint: dict[str, Any] = {}
+    kept = []
+    for output in outputs:
+        first = joint.get(output["name"]) if output["output_type"] == "stream" else None
+        if first is not None:
+            first["text"].append(output["text"])
+            continue
+        if output["output_type"] == "stream":
+            output["text"] = [output["text"]]
+            joint[output["name"]] = output
+        kept.append(output)
+    for output in joint.values():
+        lines = "".join(output["text"]).replace("\r\n", "\n").split("\n")
+        output["text"] = "\n".join(line.rstrip("\r").rpartition("\r")[2] for line in lines)
+    return kept
+
+
 def _stored(notebook: Any) -> str:
     """Return the text of an executed notebook as it is saved."""
     from nbformat import v4  # noqa: PLC0415
 
+    for cell in notebook.cells:
+        if cell.cell_type == "code":
+            cell.outputs = _join_streams(cell.outputs)
     notebook.metadata["kernelspec"] = dict(_KERNEL)
     # The kernel reports its exact version here, which differs from machine to machine.
     notebook.metadata["language_info"] = dict(_LANGUAGE)

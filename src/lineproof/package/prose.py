@@ -122,9 +122,10 @@ class _Tokens:
                 return (Mark("code" if kind == "codespan" else "listing", text),)
             case "heading":
                 level = int(token["attrs"]["level"])
-                if not children:
+                inside = self.marks(children, depth)
+                if not inside:
                     return self._empty_heading(level)
-                return (Mark("heading", children=self.marks(children, depth), level=level),)
+                return (Mark("heading", children=inside, level=level),)
             case "list":
                 ordered = "numbered" if token["attrs"]["ordered"] else "list"
                 return (Mark(ordered, children=self.marks(children, depth)),)

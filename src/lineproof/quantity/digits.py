@@ -122,9 +122,10 @@ def choose_digits(
     """Choose the fewest digits so that the printed arguments give the printed result.
 
     Each number starts short. While the function of the printed arguments does not round to the
-    printed result, the argument whose rounding moves the result most gains a digit, to six at most; only when none is left does the result give one up. A
-    result that is nothing but the difference of roundings prints as 0.00; only where even that
-    misses, or where the result must show ``needed`` digits, do arguments go beyond six.
+    printed result, the argument whose rounding moves the result most gains a digit, to six at
+    most; only when none is left does the result give one up. A result that is nothing but the
+    difference of roundings prints as 0.00; only where even that misses, or where the result must
+    show ``needed`` digits, do arguments go beyond six.
     ``decimals`` asks for a result to so many decimals instead of significant digits;
     ``wanted`` asks for more digits than the start, as far as they can be had.
     """

@@ -10,7 +10,6 @@ from lineproof.errors import UserError
 from lineproof.record import Entry, Part
 from lineproof.record.entry import VALUES
 
-
 _CALLS_NAMED = 3
 
 

@@ -10,10 +10,10 @@ from hypothesis import assume, given
 from hypothesis import strategies as st
 
 from lineproof.beams.analysis.arrangements import (
+    Combination,
     LoadCase,
     all_arrangements,
     cases_of,
-    Combination,
     factored_combinations,
     standard_arrangements,
 )
@@ -46,9 +46,10 @@ from .random_beams import beams, loads_on, repeatable
 
 WIDE = Support("simple", 400)
 THREE = Beam((Span(7600, 8e13), Span(9200, 8e13), Span(7600, 8e13)), (WIDE,) * 4)
-LOADS: list[Load] = [
-    load for n in (1, 2, 3) for load in (UniformLoad("D", n, 30), UniformLoad("L", n, 24))
-] + [PointLoad("D", 2, 50e3, 3000)]
+LOADS: list[Load] = []
+for _span in (1, 2, 3):
+    LOADS += [UniformLoad("D", _span, 30), UniformLoad("L", _span, 24)]
+LOADS.append(PointLoad("D", 2, 50e3, 3000))
 
 
 def three_spans() -> CaseSolution:
@@ -211,14 +212,15 @@ def test_redistribution_keeps_statics(data: st.DataObject) -> None:
             ),
             (before.solution.span(support).M0, after.solution.span(support).M0),
         ):
-            share = np.where((old >= 0) & (new == old), 1.0, 1 - percent / 100)
+            kept = (old >= 0) & np.isclose(new, old, rtol=1e-9, atol=0.01)
+            share = np.where(kept, 1.0, 1 - percent / 100)
             size = np.abs(old).max() + 1
             assert np.allclose(new, share * old, rtol=0, atol=1e-9 * size)
-    for old, new in zip(before.solution.spans, after.solution.spans, strict=True):
+    for elastic, shifted in zip(before.solution.spans, after.solution.spans, strict=True):
         # The change of moment is a straight line: no load was added.
-        x = np.array([0.0, old.length / 2, old.length])
-        change = new.moment(x) - old.moment(x)
-        size = np.abs(old.moment(x)).max() + 1
+        x = np.array([0.0, elastic.length / 2, elastic.length])
+        change = shifted.moment(x) - elastic.moment(x)
+        size = np.abs(elastic.moment(x)).max() + 1
         assert np.allclose(
             change[:, 1], (change[:, 0] + change[:, 2]) / 2, rtol=0, atol=1e-9 * size
         )
@@ -275,7 +277,7 @@ def test_deflections_after_redistribution_are_refused() -> None:
 
 
 def test_the_coefficients_themselves() -> None:
-    """Setareh and Darvas, Concrete Structures, 2nd ed. (Springer 2017), Table A2.1, p. 608 (K12)."""
+    """K12: Setareh and Darvas, Concrete Structures (Springer 2017), Table A2.1, p. 608."""
     assert {k: 1 / v for k, v in POSITIVE.items()} == pytest.approx(
         {"unrestrained": 0.09090909, "integral": 0.07142857, "interior": 0.0625}, rel=1e-6
     )
@@ -346,7 +348,7 @@ def test_ends_held_by_columns_or_spandrels() -> None:
     [
         (Beam((Span(8000, 8e13),), (WIDE,) * 2), UNIFORM[:2], "one span only"),
         (THREE, UNIFORM, "spans 1 and 2 differ by 1.21, more than 1.2"),
-        (Beam((Span(8000, 8e13), Span(8000, 9e13)), (WIDE,) * 3), UNIFORM[:4], "EI is not the same"),
+        (Beam((Span(8e3, 8e13), Span(8e3, 9e13)), (WIDE,) * 3), UNIFORM[:4], "EI is not the same"),
         (Beam((Span(8000, 8e13),) * 2, (WIDE, WIDE, FREE)), UNIFORM[:4], "span 2 is a cantilever"),
         (
             Beam((Span(8000, 8e13),) * 2, (WIDE,) * 3),

@@ -139,7 +139,7 @@ def service_combinations(kinds: Iterable[str]) -> tuple[Combination, ...]:
     """Return the service combinations of NBC 2020, 4.1.3.4, and dead load alone.
 
     >>> [c.name for c in service_combinations(["D", "L"])]
-    ['1D', '1D + 1L']
+    ['1.0D', '1.0D + 1.0L']
     """
     return _combinations(SERVICE_CASES, "NBC 4.1.3.4", kinds)
 
@@ -188,7 +188,8 @@ def _companion(companion: Companion, present: Sequence[str]) -> dict[str, float]
 
 def _sum_of(factors: Sequence[tuple[str, float]]) -> str:
     """Write a combination as a sum: ``1.25D + 1.5L``."""
-    return " + ".join(f"{factor:.12g}{kind}" for kind, factor in factors)
+    texts = ((kind, f"{factor:.12g}") for kind, factor in factors)
+    return " + ".join(f"{text if '.' in text else text + '.0'}{kind}" for kind, text in texts)
 
 
 def cases_of(

@@ -182,10 +182,11 @@ def _check_alike(table: Table, lengths: Sequence[float], faults: ManyFaults) -> 
         wanted = _places(table[first].get(number, ()))
         for case in others:
             found = _places(table[case].get(number, ()))
-            for x, _ in sorted(set(wanted) ^ set(found)) if found else ():
-                what = "misses" if x in {w for w, _ in wanted} else "has"
+            for x, side in sorted(set(wanted) ^ set(found)) if found else ():
+                what = "misses" if (x, side) in wanted else "has"
                 faults.add(
-                    f"{case}, span {number}: {what} the station {x / 1000:g} m, unlike {first}"
+                    f"{case}, span {number}: {what} the {side} side of the station {x / 1000:g} m, "
+                    f"unlike {first}"
                 )
 
 

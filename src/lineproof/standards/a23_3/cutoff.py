@@ -14,7 +14,7 @@ _criterion = partial(criterion, notation=A23_3 | NBC)
 EXTENSION = _formula(
     "l_e = max(d, 12*d_b, d_v*cot(theta))",
     unit="mm",
-    clause="12.10.3, 11.3.9.1",
+    clause="12.10.3",
     title="Extension past the point of no further need, shear shift counted",
     basis=FROM_MEMORY,
 )

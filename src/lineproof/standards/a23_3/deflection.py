@@ -72,11 +72,11 @@ STEEL_MODIFIER = _formula(
     numbers={"670": "MPa"},
 )
 DENSITY_MODIFIER = _formula(
-    "k_gc = max(1.65 - 0.0003*gamma_c, 1)",
+    "k_gc = max(1.65 - 0.3*gamma_c/1000, 1)",
     clause="9.8.2.1",
     title="Modifier of the least depth for low density",
     basis=FROM_MEMORY,
-    numbers={"0.0003": "1/kg/m3"},
+    numbers={"1000": "kg/m3"},
 )
 LEAST_DEPTH = _formula(
     "h_min = l_n/k_h",

@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from functools import partial
 
 from lineproof.formula import Criterion, criterion
+from lineproof.record import Procedure
 from lineproof.standards.a23_3 import strain
 from lineproof.standards.a23_3.notation import NOTATION
 from lineproof.standards.references import MECHANICS
@@ -45,9 +46,7 @@ def _axis(concrete: str, bars: str) -> Criterion:
 
 
 AXES = {
-    (case, in_flange, yields): _axis(
-        _BLOCK[in_flange], _AT_YIELD if yields else _BY_STRAINS[case]
-    )
+    (case, in_flange, yields): _axis(_BLOCK[in_flange], _AT_YIELD if yields else _BY_STRAINS[case])
     for case in _BY_STRAINS
     for in_flange in (True, False)
     for yields in (True, False)
@@ -124,7 +123,7 @@ def closings(key: strain.Key, values: Mapping[str, float]) -> tuple[Criterion, C
 
 
 def parabola_closings(key: strain.Key, values: Mapping[str, float]) -> tuple[Criterion, Criterion]:
-    """Return what closes axis and moment of the parabolic curve; bounds where it is no rectangle."""
+    """Return what closes axis and moment of the parabolic curve; bounds where it is in the web."""
     zone, case = key
     axis = _value(strain.AXIS_PARABOLA[key], values, strain.PARABOLA_SETTINGS)
     in_flange = zone == "rectangle" or axis <= values["h_f"]
@@ -134,9 +133,9 @@ def parabola_closings(key: strain.Key, values: Mapping[str, float]) -> tuple[Cri
 
 
 def _value(
-    made: strain.Procedure, values: Mapping[str, float], settings: Mapping[str, float] | None = None
+    made: Procedure, values: Mapping[str, float], settings: Mapping[str, float] | None = None
 ) -> float:
-    return made.function(*[values[name] for name in made.names], **(settings or {}))
+    return float(made.function(*[values[name] for name in made.names], **(settings or {})))
 
 
 def _yields(case: str, axis: float, values: Mapping[str, float]) -> bool:

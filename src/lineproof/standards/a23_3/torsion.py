@@ -7,7 +7,7 @@ from functools import partial
 from lineproof.formula import FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
-from lineproof.standards.references import MECHANICS
+from lineproof.standards.references import MECHANICS, SHEAR_2004
 
 _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
@@ -83,7 +83,7 @@ LEGS_FOR_SHEAR = _formula(
     "a_v = max(V_f - V_c, 0)/(phi_s*f_y*d_v*cot(theta))",
     clause="11.3.5",
     title="Stirrup legs that shear requires, per length",
-    basis=FROM_MEMORY,
+    basis=SHEAR_2004,
 )
 LEGS = _formula(
     "a_vt = a_v + 2*a_t",

@@ -31,7 +31,8 @@ class Companion:
         """Return the term of a formula, ``1.5*w_L`` for live load on a storage area."""
         if not storage or self.storage_extra == "0":
             return f"{self.factor}*w_{self.load}"
-        return f"{(Decimal(self.factor) + Decimal(self.storage_extra)).normalize():f}*w_{self.load}"
+        factor = float(Decimal(self.factor) + Decimal(self.storage_extra))
+        return f"{factor}*w_{self.load}"
 
 
 @dataclass(frozen=True, slots=True)

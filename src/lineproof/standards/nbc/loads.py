@@ -95,7 +95,9 @@ FLOOR = _formula(
     title="Floor carried, on the tributary width",
     basis=MECHANICS,
 )
-DEAD_BEAM = _formula("w_D = w_bm + w_fl + w_SD", clause="NBC 4.1.4.1", title="Dead load", basis=MECHANICS)
+DEAD_BEAM = _formula(
+    "w_D = w_bm + w_fl + w_SD", clause="NBC 4.1.4.1", title="Dead load", basis=MECHANICS
+)
 LIVE = _formula(
     "w_L = q_L*b_tr",
     clause="NBC 4.1.5.3",
