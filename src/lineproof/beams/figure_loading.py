@@ -72,7 +72,7 @@ def loading_figure(
         if label:
             shapes.extend(_reaction(pen, x, beam - SUPPORT - 1.6, label))
     level = (0.0, pen.y(tail)), (span, pen.y(tail))
-    shapes.append(Dimension(*level, "horizontal", -6.0, symbol("l")))
+    shapes.append(Dimension(*level, "horizontal", -6.0, symbol("l"), f"{span:.0f} mm"))
     if moment:
         shapes.extend(_moment(pen, span, 3.0, moment))
     if note:

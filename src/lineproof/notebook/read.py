@@ -136,7 +136,7 @@ def _check_anchors(
         if key not in parts:
             faults.add(
                 f"{name}: {anchor.cell.name} shows part {key!r}, which the record does not hold; "
-                f"{RUN_ALL}"
+                f"put the cell above the one with sheet.close(), {RUN_ALL}"
             )
     for key in parts:
         if key not in anchors:
