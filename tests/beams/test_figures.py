@@ -366,7 +366,7 @@ def test_loading_span_is_to_scale() -> None:
     (span,) = [s for s in figure.shapes if isinstance(s, Dimension)]
     reactions = [s for s in figure.shapes if isinstance(s, Arrow) and s.end[1] > s.start[1]]
 
-    assert (span.measured, span.value) == (7600.0, "")
+    assert (span.measured, span.value) == (7600.0, "7600 mm")
     assert [s.end[0] for s in reactions] == [0.0, 7600.0]
     assert {"load 3  30.0 kN/m", "Rf = 352 kN", "Tributary width 7.8 m."} <= set(words_of(figure))
 

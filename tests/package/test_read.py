@@ -38,8 +38,8 @@ def test_both_files_carry_the_record(record: dict[str, Any]) -> None:
 @pytest.mark.parametrize(
     ("content", "said"),
     [
-        (b"", "cannot be read"),
-        (b"%PDF-1.7\ngarbage", "cannot be read"),
+        (b"", "its end is missing"),
+        (b"%PDF-1.7\ngarbage", "its end is missing"),
         (b"%PDF-1.7\n" + b"1 0 obj\n" * 4_000_000, "its end is missing"),
         (b"%PDF-1.7\nstartxref\n5\n%%EOF", "it is damaged"),
         (pdf_with(), "no record is attached"),

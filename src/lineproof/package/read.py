@@ -64,7 +64,7 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
     import pypdf.errors  # noqa: PLC0415
 
     if b"startxref" not in content[-_TAIL:]:  # else the reader searches it all, line by line
-        raise UserError("this PDF cannot be read, its end is missing; give the whole file")
+        raise UserError("this PDF is damaged, its end is missing; give the whole file")
     try:
         with _silent("pypdf"):
             reader = pypdf.PdfReader(io.BytesIO(content))
