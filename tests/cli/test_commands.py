@@ -276,3 +276,17 @@ def test_a_file_without_end_is_not_read_to_its_end(
     path.symlink_to("/dev/zero")
     assert main(["lines", str(path)]) == 2
     assert capsys.readouterr().err == f"{path}: larger than 64 MB; not read\n"
+
+
+def test_undoing_leaves_what_another_issue_has_put_there(tmp_path: Path) -> None:
+    class MeanwhileAnother(dict[Path, bytes]):
+        def items(self) -> Any:
+            for path, content in super().items():
+                yield path, content
+                (tmp_path / "new" / "other.pdf").write_bytes(b"other")
+
+    (tmp_path / "file").write_bytes(b"")
+    files = MeanwhileAnother({tmp_path / "new" / "a.pdf": b"a", tmp_path / "file" / "b": b"b"})
+    with pytest.raises(UserError, match="nothing has been changed"):
+        write_all(files)
+    assert [path.name for path in (tmp_path / "new").iterdir()] == ["other.pdf"]

@@ -6,6 +6,7 @@ import os
 import secrets
 import shutil
 from collections.abc import Mapping
+from contextlib import suppress
 from pathlib import Path
 
 from lineproof.errors import UserError
@@ -77,7 +78,8 @@ class _Writing:
         for beside in self._new.values():
             beside.unlink(missing_ok=True)
         for folder in reversed(self._folders):
-            folder.rmdir()
+            with suppress(OSError):  # another issue has meanwhile put its files there
+                folder.rmdir()
 
     def finish(self) -> None:
         """Remove what was kept for undoing."""
@@ -90,5 +92,10 @@ class _Writing:
             return
         if folder.parent != folder:
             self._make_folder(folder.parent)
-        folder.mkdir()
-        self._folders.append(folder)
+        try:
+            folder.mkdir()
+        except FileExistsError:
+            if not folder.is_dir():  # else another issue has made it in this moment
+                raise
+        else:
+            self._folders.append(folder)
