@@ -15,7 +15,9 @@ GALLERY: Mapping[str, Any] = {
     "f_c": "32 MPa", "grade": "400R", "superimposed": "1.8 kPa", "use": "assembly area",
     "exposure": "N", "fire_rating": "2 h", "cover": "30 mm",
 }  # fmt: skip
-RECTANGULAR: Mapping[str, Any] = {"shape": "rectangular", "h_f": None}
+RECTANGULAR: Mapping[str, Any] = {
+    "shape": "rectangular", "h_f": None, "floor_weight": "3.4 kPa",
+}  # fmt: skip
 EDGE: Mapping[str, Any] = {"shape": "L", "tributary_width": "1.75 m"}
 CALLS = (
     "loads", "section", "bars", "balanced", "flexure", "second_path", "minimum_steel", "top_steel",

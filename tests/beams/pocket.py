@@ -88,6 +88,11 @@ def last_digit(printed: str) -> float:
     return unit * 10.0 ** int(power or 0)
 
 
+def _half_a_unit(printed: str) -> float:
+    """Return how far a value may lie from its printed number that it rounds to."""
+    return last_digit(printed) * (0.5 + 1e-9)
+
+
 def faults(data: Mapping[str, Any]) -> Iterator[str]:
     """Give every printed line of a record that a calculator does not reproduce."""
     for part in data["parts"]:
@@ -108,7 +113,7 @@ def _line(entry: Mapping[str, Any]) -> Iterator[str]:
         results.append((printed["coherent"]["result"], printed["coherent"]["unit"]))
     for result, unit in results:
         value = float(found / FACTORS[entry["system"]][unit])
-        if abs(value - float(result)) > last_digit(result) * (1 + 1e-9):
+        if abs(value - float(result)) > _half_a_unit(result):
             line = f"{entry['id']}: {entry['formula']} with {printed['args']}"
             yield f"{line} gives {value}, not {result} {unit}"
 
@@ -122,7 +127,7 @@ def _comparison(place: str, test: Mapping[str, Any], system: str) -> Iterator[st
     factor = FACTORS[system][test["unit"]]
     for value, key in ((left, "left"), (right, "right")):
         # A difference near zero keeps no digits: abs(...) may print 0 for 1e-9.
-        room = last_digit(printed[key]) * (1 + 1e-9)
+        room = _half_a_unit(printed[key])
         if (
             "abs(" not in test["formula"]
             and abs(float(value / factor) - float(printed[key])) > room

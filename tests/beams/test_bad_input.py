@@ -73,9 +73,16 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     "not in line": (
         {"bottom_bars": "2-25M / 4-25M"},
         (
-            "bottom_bars: '2-25M / 4-25M' has more bars in the second layer than in the first, "
-            "so they "
-            "cannot stand in line; write for example '2-25M / 2-25M'"
+            "bottom_bars: '2-25M / 4-25M': the bars of the second layer cannot stand in line with "
+            "the first; write for example '2-25M / 2-25M'"
+        ),
+    ),
+    "odd above even": (
+        # two over the outer bars, the third over the middle of four: no bar stands there
+        {"bottom_bars": "4-25M / 3-20M"},
+        (
+            "bottom_bars: '4-25M / 3-20M': the bars of the second layer cannot stand in line with "
+            "the first; write for example '4-25M / 2-20M'"
         ),
     ),
     "compression bars in two layers": (
@@ -154,8 +161,30 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "no slab": ({"h_f": None}, "h_f: a beam of shape 'T' needs its slab; write '140 mm'"),
     "rectangle with a slab": (
-        {"shape": "rectangular"},
+        {"shape": "rectangular", "floor_weight": "0 kPa"},
         "h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'",
+    ),
+    "rectangle without its floor": (
+        {"shape": "rectangular", "h_f": None},
+        (
+            "floor_weight: a rectangular beam needs the weight of the floor it carries; write "
+            "'3.4 kPa', or '0 kPa' if it carries none"
+        ),
+    ),
+    "floor of a tee": (
+        {"floor_weight": "3.4 kPa"},
+        "floor_weight: the slab of a T or an L is counted from h_f; write None",
+    ),
+    "negative floor": (
+        {**RECTANGULAR, "floor_weight": "-1 kPa"},
+        "floor_weight: '-1 kPa' is negative; write a positive value such as '25 kPa'",
+    ),
+    "light, called normal": (
+        {"gamma_c": "2149 kg/m3"},
+        (
+            "gamma_c: '2149 kg/m3' is not normal density; write at least '2150 kg/m3', or density "
+            "= 'semi-low' or 'low'"
+        ),
     ),
     "edge beam without its width": (
         {"shape": "L"},
@@ -185,11 +214,12 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
         "use: 'roof' carries snow, which this beam does not take; write a use inside the building",
     ),
     "hopeless": (
-        # w_f = 1.25 x (5.6544 + 40 x 3.1) + 1.5 x 14.88 = 184.4; x 7.22 = 1331.3 kN.m;
+        # w_f = 1.25 x (5.6544 + 3.4 x 3.1 + 40 x 3.1) + 1.5 x 14.88 = 175.243 + 22.32 = 197.563;
+        # x 7.22 = 1426.4 kN.m;
         # 16.6816 x 380 x 566.1**2/2 = 1015.7 kN.m
         {**RECTANGULAR, "superimposed": "40 kPa", "bottom_bars": "4-25M"},
         (
-            "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1331.3 kN.m; "
+            "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1426.4 kN.m; "
             "write a deeper or wider beam"
         ),
     ),

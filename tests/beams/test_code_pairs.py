@@ -38,8 +38,11 @@ def test_changed_clause_is_named_and_the_old_rule_used() -> None:
     """NBC 2020 with A23.3:19: a note, a row to confirm, 0.636 until the office has a value."""
     record = record_of(project=NEW)
     note = record.entries["materials/changed-10-5-2"]
-    assert note["text"].startswith("CSA A23.3:19 changed clause 10.5.2")
-    assert "the rule of A23.3-14 is used" in note["text"]
+    assert note["text"] == (
+        "Clause 10.5.2: limit of c/d: changed since A23.3-14. Its text in CSA A23.3:19 is not "
+        "known here: the rule known before is used until the office confirms this one in its own "
+        "copy."
+    )
     assert number(record, "flexure/c_d") == pytest.approx(7 / 11)
     changed = [r for r in rows_to_confirm(record, "10.5.2") if "CSA A23.3:19" in r["basis"]]
     assert len(changed) == 1
@@ -48,6 +51,32 @@ def test_changed_clause_is_named_and_the_old_rule_used() -> None:
     assert record.data["codes"] == {
         "pair": "NBC 2020 + A23.3:19", "building": "NBC 2020", "concrete": "CSA A23.3:19",
     }  # fmt: skip
+
+
+def test_newest_pair_names_every_clause_not_seen() -> None:
+    """NBC 2025 + A23.3:24: ductility, load cases, live loads, stress block; each to be confirmed.
+
+    NBC clauses are those of the building code, the others those of the concrete standard.
+    """
+    record = record_of(project={"codes": {"pair": "NBC 2025 + A23.3:24"}})
+    codes = {
+        "10.5.2": "CSA A23.3:24", "10.1.7": "CSA A23.3:24", "NBC 4.1.3.2": "NBC 2025",
+        "NBC 4.1.5.3": "NBC 2025",
+    }  # fmt: skip
+    for clause, code in codes.items():
+        key = f"materials/changed-{clause.replace('.', '-').replace(' ', '-')}"
+        assert f"Its text in {code} is not known here" in record.entries[key]["text"]
+        (row,) = [r for r in rows_to_confirm(record, clause) if key in r["lines"]]
+        assert (row["confirmed"], code in row["basis"]) == ("", True)
+    notes = {i for i in record.entries if i.startswith("materials/changed-")}
+    assert len(notes) == len(codes)
+
+
+def test_rows_to_confirm_are_one_per_clause_and_basis() -> None:
+    """No row twice; the fire tables, from memory in part, are on the list."""
+    rows = [(r["clause"], r["basis"]) for r in record_of().data["confirm"]]
+    assert len(rows) == len(set(rows))
+    assert any(clause.startswith("NBC D-2") for clause, _ in rows)
 
 
 def test_confirmed_value_is_used() -> None:

@@ -25,7 +25,7 @@ CHECKS = {
     "cover/cover-fire", "cover/width-fire", "flexure/yield", "flexure/strength",
     "second-path/second-path", "second-path-balanced/second-path", "crack-control/crack-control",
 }  # fmt: skip
-DECISIONS = {"minimum-steel/waiver", "crack-control/skin-required"}
+DECISIONS = {"crack-control/skin-required"}
 
 
 @st.composite
@@ -47,6 +47,10 @@ def beams(draw: st.DrawFn) -> dict[str, Any]:
         "use": draw(st.sampled_from(["office", "assembly area", "library stack room"])),
         "ends": draw(st.sampled_from(["free", "cast with a girder", "cast with a column"])),
         "minimum_rule": draw(st.sampled_from(["10.5.1.1", "10.5.1.2"])),
+        "floor_weight": (
+            f"{draw(st.integers(0, 50)) / 10} kPa" if shape == "rectangular" else None
+        ),
+        "waive_minimum_at_ends": draw(st.booleans()),
         "tributary_width": f"{draw(st.integers(12, 25)) / 10} m" if shape == "L" else None,
         "bottom_bars": draw(st.sampled_from([None, None, "3-25M", "4-25M", "3-25M / 2-20M"])),
     }
@@ -84,11 +88,10 @@ def _all_checks_are_there(record: Record, inputs: dict[str, Any]) -> None:
     if inputs["shape"] != "rectangular":
         wanted.add("cover/slab-fire")
     if "bars/A_s2" in kinds:
-        wanted.add("bars/bars-fit-2")
-    if not record.entries["minimum-steel/waiver"]["holds"]:
-        key = "minimum-by-cracking" if inputs["minimum_rule"] == "10.5.1.1" else "minimum-steel"
-        wanted.add(f"minimum-steel/{key}")
+        wanted |= {"bars/bars-fit-2", "flexure/yield-upper"}
+    _minimum_is_checked(record, inputs, "minimum-steel", waivable=True)
     if inputs["ends"] != "free":
+        _minimum_is_checked(record, inputs, "top-steel", waivable=inputs["waive_minimum_at_ends"])
         names = ["bars-fit", "steel-for-moment", "yield", "strength", "second-path"]
         if inputs["shape"] != "rectangular":
             names.append("top-bars-spread")
@@ -97,6 +100,20 @@ def _all_checks_are_there(record: Record, inputs: dict[str, Any]) -> None:
         wanted |= {"crack-control/skin-area", "crack-control/skin-spacing"}
     assert {i for i in wanted if kinds.get(i) != "check"} == set()
     assert {i for i in DECISIONS if kinds.get(i) != "decision"} == set()
+
+
+def _minimum_is_checked(
+    record: Record, inputs: dict[str, Any], part: str, *, waivable: bool
+) -> None:
+    """The rule is a check; not met where it may be waived, it is a decision, the waiver a check."""
+    key = "minimum-by-cracking" if inputs["minimum_rule"] == "10.5.1.1" else "minimum-steel"
+    rule, waiver = (record.entries.get(f"{part}/{name}") for name in (key, "waiver"))
+    assert rule is not None
+    if rule["holds"] or not waivable:
+        assert (rule["kind"], waiver) == ("check", None)
+    else:
+        assert waiver is not None
+        assert (rule["kind"], waiver["kind"]) == ("decision", "check")
 
 
 def _no_failed_check_where_bars_were_chosen(record: Record, inputs: dict[str, Any]) -> None:

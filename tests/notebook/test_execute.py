@@ -115,7 +115,6 @@ def test_what_is_printed_is_joined_in_one_pass(unrun: Notebook, tmp_path: Path) 
     assert (second["name"], second["text"]) == ("stderr", ["e\n"])
 
 
-@pytest.mark.skipif(os.name != "posix", reason="signals of POSIX")
 def test_a_cell_that_never_ends_is_stopped_by_the_keyboard(unrun: Notebook, tmp_path: Path) -> None:
     timer = threading.Timer(3, os.kill, (os.getpid(), signal.SIGINT))
     timer.start()

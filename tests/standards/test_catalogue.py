@@ -94,7 +94,8 @@ def test_criterion_is_complete(place: str) -> None:
     assert criterion.key.replace("-", "").replace("_", "").isalnum()
     for sentence in filter(None, (criterion.yes, criterion.no)):
         assert sentence.endswith(".")
-    assert bool(criterion.yes) == bool(criterion.no)
+    if not place.startswith("strain_closing."):  # a closing that fails is no result to print
+        assert bool(criterion.yes) == bool(criterion.no)
 
 
 def _is_described(source: Formula | Criterion, constants: tuple[str, ...]) -> None:
@@ -119,7 +120,7 @@ def test_every_module_lists_all_it_declares() -> None:
 def test_table_is_complete(place: str) -> None:
     """Every row has every column as a positive number; clause, source and basis are given."""
     table = dict(catalogue.tables())[place]
-    assert table.clause
+    assert all(table.clause_of(column) for column in table.columns)
     assert table.source
     assert table.basis in BASES
     for key, row in table.rows.items():
@@ -127,6 +128,23 @@ def test_table_is_complete(place: str) -> None:
         for column, number in row.items():
             assert (float(number) == 0) == ((place, key, column) in ZEROS)
             assert float(number) >= 0
+
+
+def test_clauses_name_their_code() -> None:
+    """Loads are clauses of the building code, with its name; statics and geometry are none."""
+    entries = [(p, f.clause) for p, f in FORMULAS.items()]
+    entries += [(p, c.clause) for p, c in CRITERIA.items()]
+    for place, clause in entries:
+        if place.startswith(("loads.", "combinations.", "reduction.")):
+            # the coefficients of the end moments are the concrete standard's
+            ours = clause in ("statics", "geometry") or (place, clause) in (
+                ("loads.MOMENT_END_GIRDER", "9.3.3"), ("loads.MOMENT_END_COLUMN", "9.3.3"),
+            )  # fmt: skip
+            assert clause.startswith("NBC ") or ours, place
+    assert FORMULAS["flange.CRACKING_BOTTOM"].clause == "9.8.2.3"
+    assert FORMULAS["flange.INERTIA_TEE"].clause == "geometry"
+    assert FORMULAS["compression_steel.STRESS"].clause == "8.5.3.2"
+    assert CRITERIA["compression_steel.CLOSES"].clause == "10.1.1"
 
 
 def test_every_formula_has_a_worked_number() -> None:
@@ -165,6 +183,15 @@ def test_criterion_holds_and_fails(place: str) -> None:
         left, right = (side(*values) for side in criterion.functions)
         truths.append(criterion.holds(left, right))
     assert truths == [True, False]
+
+
+def test_a_limit_met_but_for_round_off_holds() -> None:
+    """0.1 + 0.2 is 5.6e-17 above 0.3 as a float: a share of 1.9e-16 is met, one of 1e-9 is not."""
+    criterion = CRITERIA["flexure.STRENGTH"]
+    assert 0.1 + 0.2 > 0.3
+    assert criterion.holds(0.1 + 0.2, 0.3)
+    assert criterion.holds(327.4e6 * (1 + 1e-13), 327.4e6)
+    assert not criterion.holds(327.4e6 * (1 + 1e-9), 327.4e6)
 
 
 @pytest.mark.parametrize("place", FORMULAS)

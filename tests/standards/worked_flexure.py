@@ -217,7 +217,14 @@ CRACKS = (
         "240*(63.9*11182.5)**(1/3) = 240*714561.75**(1/3) = 21456",
         CHECK_7,
     ),
-    W("crack_control.SKIN_HEIGHT", {"h": 900, "d": 815}, "0.5*900 - 2*85 = 280", CHECK_14),
+    W(
+        "crack_control.SKIN_HEIGHT",
+        {"h": 900, "d": 815},
+        "max(0.5*900 - 2*85, 0) = max(280, 0) = 280",
+        CHECK_14,
+    ),
+    # bars high up: twice their distance of 200 mm is more than half the depth
+    W("crack_control.SKIN_HEIGHT", {"h": 760, "d": 560}, "max(0.5*760 - 2*200, 0) = 0"),
     W(
         "crack_control.SKIN_DEPTH",
         {"c_c": 40, "d_bs": 11.3, "d_b": 16},

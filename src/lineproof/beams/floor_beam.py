@@ -203,7 +203,8 @@ class FloorBeam:
         if not self.inputs.slab:
             return 0.0
         trial = Trial(self.sheet)
-        with trial.part("spread", "Top bars in the overhang"):
+        # In the part of the top bars themselves: one of an earlier run makes way.
+        with trial.part(TOP_STEEL, "Top bars in the overhang"):
             trial.line(minimum.SPREAD_WIDTH)
             return float(trial.line(minimum.SPREAD_AREA).value)
 

@@ -7,15 +7,12 @@ template of nbconvert is used: the package has its own, in its own folder.
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import TYPE_CHECKING, Any
+from typing import Any, ClassVar
 
 from nbconvert.exporters import Exporter
 from nbconvert.utils.exceptions import ConversionException
 
 from lineproof.errors import UserError
-
-if TYPE_CHECKING:
-    from lineproof.package import Package
 
 Resources = dict[str, Any]
 
@@ -25,7 +22,12 @@ class NotPrintableError(UserError, ConversionException):
 
 
 class _CalcPackage(Exporter):
-    """Reads the record of a notebook and prints it; runs nothing."""
+    """Reads the record of a notebook and prints it; runs nothing.
+
+    ``printer`` names the function of the package room that prints.
+    """
+
+    printer: ClassVar[str]
 
     def from_notebook_node(
         self, nb: Any, resources: Resources | None = None, **kw: Any
@@ -34,16 +36,13 @@ class _CalcPackage(Exporter):
         notebook, made = super().from_notebook_node(nb, resources, **kw)
         name = str(made.get("metadata", {}).get("name") or "notebook")
         try:
-            printed = self._print(_package(notebook, name))
+            printed = _printed(notebook, name, self.printer)
         except UserError as error:
             raise NotPrintableError(error.faults) from None
         made["output_extension"] = self.file_extension
         for leftover in ("outputs", "attachments"):
             made.pop(leftover, None)  # with these the server would send a zip archive
         return printed, made
-
-    def _print(self, package: Package) -> str | bytes:
-        raise NotImplementedError
 
 
 class CalcPackagePdf(_CalcPackage):
@@ -52,11 +51,7 @@ class CalcPackagePdf(_CalcPackage):
     file_extension = ".pdf"
     output_mimetype = "application/pdf"
     export_from_notebook = "Calculation package (PDF)"
-
-    def _print(self, package: Package) -> bytes:
-        from lineproof.package import to_pdf  # noqa: PLC0415 - imported to print, not to list
-
-        return to_pdf(package)
+    printer = "to_pdf"
 
 
 class CalcPackageHtml(_CalcPackage):
@@ -65,16 +60,13 @@ class CalcPackageHtml(_CalcPackage):
     file_extension = ".html"
     output_mimetype = "text/html"
     export_from_notebook = "Calculation package (HTML)"
-
-    def _print(self, package: Package) -> str:
-        from lineproof.package import to_html  # noqa: PLC0415 - imported to print, not to list
-
-        return to_html(package)
+    printer = "to_html"
 
 
-def _package(notebook: Mapping[str, Any], name: str) -> Package:
+def _printed(notebook: Mapping[str, Any], name: str, printer: str) -> str | bytes:
+    from lineproof import package  # noqa: PLC0415 - imported to print, not to list
     from lineproof.notebook.read import calc_of  # noqa: PLC0415
-    from lineproof.package import build_package  # noqa: PLC0415
 
     calc = calc_of(notebook, name)
-    return build_package([calc.record], [calc.walk])
+    made: str | bytes = getattr(package, printer)(package.build_package([calc.record], [calc.walk]))
+    return made
