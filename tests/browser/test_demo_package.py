@@ -1,0 +1,104 @@
+"""The demo package as its readers open it: the HTML page offline in Chromium, and the PDF."""
+
+from __future__ import annotations
+
+import io
+from collections.abc import Iterator
+from typing import TYPE_CHECKING, Any
+
+import pypdf
+import pytest
+
+from lineproof.notebook.read import read_calc
+from lineproof.package import build_package, records_in_pdf, to_html, to_pdf
+from lineproof.record import Record
+from lineproof.resources import folder
+
+if TYPE_CHECKING:
+    from playwright.sync_api import Browser, Page
+
+DEMO = folder("calcs") / "floor-beam.ipynb"
+
+
+@pytest.fixture(scope="module")
+def demo() -> Any:
+    """The stored demo calc."""
+    return read_calc(DEMO)
+
+
+@pytest.fixture(scope="module")
+def opened(
+    demo: Any, browser: Browser, tmp_path_factory: pytest.TempPathFactory
+) -> Iterator[tuple[Page, list[str], list[str]]]:
+    """The page opened from a file with no network; what it asked for, and what it complained of."""
+    path = tmp_path_factory.mktemp("page") / "floor-beam.html"
+    path.write_text(to_html(build_package([demo.record], [demo.walk])), encoding="utf-8")
+    context = browser.new_context(viewport={"width": 1200, "height": 1600}, offline=True)
+    page = context.new_page()
+    asked: list[str] = []
+    said: list[str] = []
+    page.on("request", lambda request: asked.append(request.url))
+    page.on("console", lambda message: said.append(message.text))
+    page.on("pageerror", lambda error: said.append(str(error)))
+    page.goto(path.as_uri())
+    page.evaluate("document.fonts.ready.then(() => true)")
+    yield page, asked, said
+    context.close()
+
+
+def test_the_page_asks_for_nothing_but_itself(
+    opened: tuple[Page, list[str], list[str]],
+) -> None:
+    """Fonts and figures are in the file; nothing is written to the console."""
+    _, asked, said = opened
+
+    assert [url for url in asked if not url.startswith(("file:", "data:"))] == []
+    assert said == []
+
+
+def test_formulas_are_laid_out_as_mathematics(opened: tuple[Page, list[str], list[str]]) -> None:
+    """In the fraction of the stress block, one part stands over the other."""
+    page, _, _ = opened
+    row = page.locator("[id='flexure/a']")
+    above, below = row.locator("mfrac").first.locator(":scope > *").all()
+    top, bottom = above.bounding_box(), below.bounding_box()
+
+    assert top is not None
+    assert bottom is not None
+    assert top["y"] + top["height"] <= bottom["y"] + 1
+    assert page.evaluate("document.documentElement.scrollWidth <= window.innerWidth")
+
+
+def test_an_argument_leads_to_the_line_it_comes_from(
+    opened: tuple[Page, list[str], list[str]],
+) -> None:
+    """From M_r to the effective depth."""
+    page, _, _ = opened
+    page.locator("[id='flexure/M_r'] a", has_text="5.10").first.click()
+
+    assert page.evaluate("decodeURIComponent(location.hash)") == "#bars/d"
+
+
+def test_the_pdf_is_that_of_the_record(demo: Any) -> None:
+    """Tagged, with the record inside, every clause in its text, and the same bytes again."""
+    package = build_package([demo.record], [demo.walk])
+    content = to_pdf(package)
+    reader = pypdf.PdfReader(io.BytesIO(content))
+    catalog: Any = reader.trailer["/Root"]
+    text = " ".join(" ".join(page.extract_text() for page in reader.pages).split())
+    clauses = {entry["clause"] for entry in demo.record.entries.values() if entry["clause"]}
+
+    assert to_pdf(build_package([demo.record], [demo.walk])) == content
+    assert catalog["/MarkInfo"]["/Marked"]
+    assert "/StructTreeRoot" in catalog
+    assert [Record.from_data(data).data for data in records_in_pdf(content)] == [demo.record.data]
+    assert {clause for clause in clauses if clause not in text} == set()
+
+
+def test_the_demo_says_what_it_is(demo: Any) -> None:
+    """Preliminary, flexure only, every check holding."""
+    status = demo.record.data["status"]
+
+    assert status["scope"] == "preliminary: flexure only"
+    assert {"Shear and stirrups", "Deflection"} <= {row["check"] for row in status["not_covered"]}
+    assert status["failed"] == []
