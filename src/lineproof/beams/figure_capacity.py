@@ -137,7 +137,7 @@ def _chosen(
     middle = (low + high) / 2
     near = (left + 0.4 if left > x else right - 0.4, middle)
     at = ((left + right) / 2, middle)
-    return [Line((x, y), near, "text", THIN), Text(at, runs, "text")]
+    return [Line((x, y), near, "text", THIN), Text(at, runs, "text", backing=True)]
 
 
 _Field = tuple[float, float, float, float]

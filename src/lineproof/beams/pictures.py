@@ -14,13 +14,16 @@ from lineproof.beams.figures import (
     capacity_figure,
     section_figure,
     strain_stress_figure,
+    stress_strain_figure,
 )
 from lineproof.beams.inputs import Shape
 from lineproof.drawing import Dash, Figure, Runs, symbol, to_json
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
 from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import strain
 
+_CURVE_POINTS = 35
 LEVER_ARM: Runs = (*symbol("d"), (" − ", "roman"), *symbol("a"), ("/2", "roman"))
 LEVER_ARM_FLANGE: Runs = (*symbol("d"), (" − ", "roman"), *symbol("h", "f"), ("/2", "roman"))
 LEVER_ARM_BARS: Runs = (*symbol("d"), (" − ", "roman"), *symbol("d", "", "′"))
@@ -114,7 +117,7 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
     block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
     a, eps_cu = block.value, sheet.find("eps_cu").value
     tension = sheet.find("phi_s").value * bars["A_s"].value * sheet.find("f_y").value
-    strain = eps_cu * (d - c) / c
+    steel_strain = eps_cu * (d - c) / c
     h_f = sheet.find("h_f").value if shape != "rectangular" else 0.0
     forces, concrete = [], tension
     if "C_s" in flexure:
@@ -131,7 +134,7 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
         forces.append(Force(_force_label("C", sub, concrete), a / 2, LEVER_ARM))
     figure = strain_stress_figure(
         section_shape(sheet, shape),
-        StressState(d, c, a, eps_cu, strain, in_unit(strain, "", 3)),
+        StressState(d, c, a, eps_cu, steel_strain, in_unit(steel_strain, "", 3)),
         compression=forces,
         tension=Force(_force_label("T", "", tension), d),
         rows=bottom_rows(bars, layers),
@@ -142,6 +145,21 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
 
 def _force_label(base: str, sub: str, force: float) -> Runs:
     return (*symbol(base, sub), (f" = {in_unit(force, 'kN', 3)} kN", "roman"))
+
+
+def record_curve_figure(sheet: Sheet) -> None:
+    """Record the parabolic concrete curve of the comparison inside the open part."""
+    phi_c, f_c, eps_cu = (sheet.find(name) for name in ("phi_c", "f_c", "eps_cu"))
+    peak = strain.PEAK_OF_PARABOLA * phi_c.value * f_c.value
+    strains = [eps_cu.value * n / _CURVE_POINTS for n in range(_CURVE_POINTS + 1)]
+    points = [(1000 * e, strain.parabola_stress(e, peak, strain.STRAIN_AT_PEAK)) for e in strains]
+    figure = stress_strain_figure(
+        points,
+        peak=(1000 * strain.STRAIN_AT_PEAK, peak),
+        peak_label=((f"{in_unit(peak, 'MPa', 3)} MPa", "roman"),),
+        caption="Concrete curve of the comparison",
+    )
+    _record(sheet, "curve", figure, [phi_c, f_c, eps_cu])
 
 
 def moment_level(M: Entry, sub: str, name: str, dash: Dash) -> MomentLevel:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import Shape
+from lineproof.beams.pictures import record_curve_figure
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
 from lineproof.record import Entry
@@ -43,6 +44,7 @@ def record_proof(
 def record_parabola(steps: Steps, key: strain.Key) -> None:
     """Record inside the open part what a parabolic concrete curve would give, for information."""
     steps.sheet.note("parabola", strain.PARABOLA, title="For information", basis="common practice")
+    record_curve_figure(steps.sheet)
     values = {n: steps.entry(n).value for n in strain.AXIS_PARABOLA[key].names}
     axis, moment = strain_closing.parabola_closings(key, values)
     steps.found(

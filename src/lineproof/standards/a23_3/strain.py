@@ -81,16 +81,21 @@ def block_strips(section: Section, stress: float, beta_1: float) -> Strips:
     return strips
 
 
-def parabola_strips(section: Section, peak: float, strain_at_peak: float, eps_cu: float) -> Strips:
-    """Return the strips of a parabola up to ``peak`` [MPa], constant beyond its strain."""
+def parabola_stress(strain: float, peak: float, strain_at_peak: float) -> float:
+    """Return the stress of a parabola up to ``peak`` [MPa], constant beyond its strain."""
+    share = min(strain / strain_at_peak, 1.0)
+    return peak * (2 * share - share * share)
 
-    def stress(strain: float) -> float:
-        share = min(strain / strain_at_peak, 1.0)
-        return peak * (2 * share - share * share)
+
+def parabola_strips(section: Section, peak: float, strain_at_peak: float, eps_cu: float) -> Strips:
+    """Return the strips of a parabola up to ``peak`` [MPa]."""
+
+    def stress(depth: float, c: float) -> float:
+        return parabola_stress(eps_cu * (1 - depth / c), peak, strain_at_peak)
 
     def strips(c: float) -> list[tuple[float, float]]:
         return [
-            (stress(eps_cu * (1 - depth / c)) * section.width(depth) * thickness, depth)
+            (stress(depth, c) * section.width(depth) * thickness, depth)
             for depth, thickness in _cuts(section, c)
         ]
 
