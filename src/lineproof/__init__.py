@@ -16,7 +16,7 @@ __all__ = ["Sheet", "beams"]
 def __getattr__(name: str) -> Any:
     """Import what a notebook asks for on first use, so that commands start at once."""
     if name == "Sheet":
-        from lineproof.sheet import Sheet  # noqa: PLC0415
+        from lineproof.sheet import Sheet  # noqa: PLC0415 - as the docstring says
 
         return Sheet
     if name == "beams":
@@ -29,7 +29,7 @@ def _show_in_notebook() -> None:
     """Show parts under their cells when this runs inside IPython or a notebook."""
     ipython = sys.modules.get("IPython")
     if ipython is not None and ipython.get_ipython() is not None:
-        from lineproof.notebook.display import register  # noqa: PLC0415
+        from lineproof.notebook.display import register  # noqa: PLC0415 - only in a notebook
 
         register()
 

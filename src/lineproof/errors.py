@@ -4,6 +4,9 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
+SHOWN_PREFIX = "Wrong input: "
+"""What a fault begins with under a notebook cell; a stored output is told by it."""
+
 
 class UserError(ValueError):
     """Wrong input: says what was given and what to type instead, all faults at once.
@@ -26,7 +29,7 @@ class UserError(ValueError):
 
     def _render_traceback_(self) -> list[str]:
         """Show only the faults in a notebook (IPython asks for this method)."""
-        return [f"Wrong input: {fault}" for fault in self.faults]
+        return [f"{SHOWN_PREFIX}{fault}" for fault in self.faults]
 
 
 class FaultList:

@@ -9,6 +9,7 @@ from lineproof.beams.inputs import Shape
 from lineproof.beams.section import compression_zone
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
+from lineproof.formula import FROM_MEMORY
 from lineproof.quantity import echo
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -176,7 +177,7 @@ def record_doubly(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
             "taken off.",
             title="Compression bars",
             clause="7.6.5",
-            basis="from memory",
+            basis=FROM_MEMORY,
         )
         record_yield(steps, pair)
         steps.check(clause.STRENGTH)

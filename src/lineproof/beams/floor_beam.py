@@ -67,7 +67,7 @@ _CALLS = {
     "capacity": "beam.summary()",
 }
 """The call that makes each part, in the order of the calculation."""
-_SINGLY = (REQUIRED, "capacity")
+_WITHOUT_COMPRESSION_BARS = (REQUIRED, "capacity")
 """Parts of a beam without compression bars only."""
 
 
@@ -91,8 +91,7 @@ class FloorBeam:
 
     def bars(self) -> None:
         """Record bottom bars, as given or chosen, the effective depth and the cover."""
-        for needed in ("loads/M_f", "section/I_g"):
-            self.sheet.entry(needed)
+        self._need("loads/M_f", "section/I_g")
         self._refuse_unfit_compression_bars()
         layers = self.inputs.bottom_bars
         if layers is None:
@@ -102,6 +101,11 @@ class FloorBeam:
         self._record_bars(self.sheet, layers)
         if self.inputs.bottom_bars is not None:
             refuse_unfit(self.sheet, layers, "bottom_bars")
+
+    def _need(self, *entry_ids: str) -> None:
+        """Refuse, naming the call to run first, before bars are tried on what is missing."""
+        for entry_id in entry_ids:
+            self.sheet.entry(entry_id)
 
     def _refuse_unfit_compression_bars(self) -> None:
         """Refuse them before any bottom bars are chosen: no choice could make them fit."""
@@ -183,13 +187,11 @@ class FloorBeam:
         if self.inputs.ends == "free":
             record_free_ends(self.sheet)
             return
-        for needed in ("loads/w_f", "section/I_g"):
-            self.sheet.entry(needed)
+        self._need("loads/w_f", "section/I_g")
         given = self.inputs.top_bars
         area, sides = self._spread_area(), 2 if self.inputs.shape == "T" else 1
         if given is not None:
-            candidates = [(given[0], choice.bars_for(area, given[0].size))]
-            web, overhang = candidates[0]
+            web, overhang = given[0], choice.bars_for(area, given[0].size)
         else:
             web, overhang = choice.first_that_holds(
                 self.sheet, choice.top_candidates(area, sides), self._try_top, "top_bars"
@@ -214,12 +216,12 @@ class FloorBeam:
 
     def crack_control(self) -> None:
         """Record crack control at midspan and the skin reinforcement."""
-        record_cracks(self.sheet, self.inputs, self._layers())
+        record_cracks(self.sheet, self.inputs, layers_on(self.sheet))
 
     def summary(self) -> None:
         """Record the section with its bars, strains at the resistance and the capacity curve."""
         sheet, shape = self.sheet, self.inputs.shape
-        layers = self._layers()
+        layers = layers_on(sheet)
         M_r = sheet.entry(f"{FLEXURE}/M_r")
         with sheet.part("summary", "Section and state at the resistance"):
             record_section_figure(
@@ -233,10 +235,6 @@ class FloorBeam:
                 moment_level(sheet.entry("section/M_cr"), "cr", "cracking moment", "dotted"),
             ]
             record_capacity(sheet, shape, (A_s, M_r), bars_text(layers), levels, tabulate=False)
-
-    def _layers(self) -> BarLayers:
-        """Return the bottom bars as they stand on the sheet."""
-        return layers_on(self.sheet)
 
 
 def layers_on(sheet: Sheet) -> BarLayers:
@@ -294,7 +292,8 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, pair: CodePair) -> FloorBeam:
     sheet.member = f"floor beam, one simple span, {inputs.shape} section"
     sheet.scope = SCOPE
     sheet.not_covered = not_covered(inputs)
-    left_out = (COMPRESSION_BARS,) if inputs.compression_bars is None else _SINGLY
+    doubly = inputs.compression_bars is not None
+    left_out = _WITHOUT_COMPRESSION_BARS if doubly else (COMPRESSION_BARS,)
     sheet.expect({key: call for key, call in _CALLS.items() if key not in left_out})
     basics.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair)

@@ -82,7 +82,7 @@ def read_input(name: str, given: QuantityInput) -> Typed:
 
 
 def _plain(number: float) -> str:
-    return f"{number:g}" if abs(number) < 1e6 else f"{number:.0f}"  # noqa: PLR2004
+    return f"{number:g}" if abs(number) < 1e6 else f"{number:.0f}"  # noqa: PLR2004 - no exponents
 
 
 def one_of(name: str, given: object, allowed: tuple[str, ...]) -> str:

@@ -13,7 +13,7 @@ from lineproof.standards.nbc import combinations, loads
 LOADS = "loads"
 
 
-def record_loads(sheet: Sheet, inputs: FloorBeamInputs, *, figure: bool = True) -> None:
+def record_loads(sheet: Sheet, inputs: FloorBeamInputs) -> None:
     """Record dead and live load by tributary width, the factored cases and the moment."""
     with sheet.part(LOADS, "Loads and factored moment"):
         sheet.lookup("gamma_w", loads.UNIT_WEIGHT, "reinforced, normal density")
@@ -34,8 +34,7 @@ def record_loads(sheet: Sheet, inputs: FloorBeamInputs, *, figure: bool = True) 
             title="Not taken",
             clause="NBC 4.1.5.8",
         )
-        if figure:
-            _record_figure(sheet, [*dead, live], w_f, M_f, V_f)
+        _record_figure(sheet, [*dead, live], w_f, M_f, V_f)
 
 
 def _record_dead(sheet: Sheet, inputs: FloorBeamInputs) -> list[Entry]:

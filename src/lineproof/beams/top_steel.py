@@ -8,6 +8,7 @@ from lineproof.beams.inputs import FloorBeamInputs, Shape
 from lineproof.beams.minimum_steel import minimum_of
 from lineproof.beams.second_path import record_proof
 from lineproof.beams.steps import Steps
+from lineproof.formula import COMMON_PRACTICE
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, minimum
 from lineproof.standards.a23_3 import flexure as clause
@@ -41,7 +42,7 @@ def record_free_ends(sheet: Sheet) -> None:
             "The ends rest freely: no moment arises there; the bars that hold the stirrups are "
             "not part of this calculation.",
             title="Ends",
-            basis="common practice",
+            basis=COMMON_PRACTICE,
         )
 
 
@@ -85,7 +86,7 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) 
     steps = Steps(sheet, {"b": b_w, "b_w": b_w})
     origin = "given" if inputs.top_bars else "chosen: least mass, then few bars"
     sheet.note("bars-text", _text(inputs.shape, web, overhang), title="Bars")
-    sheet.note("restraint", _RESTRAINT[inputs.ends], title="Restraint", basis="common practice")
+    sheet.note("restraint", _RESTRAINT[inputs.ends], title="Restraint", basis=COMMON_PRACTICE)
     steps.line(
         loads.MOMENT_END_GIRDER if inputs.ends.endswith("girder") else loads.MOMENT_END_COLUMN
     )

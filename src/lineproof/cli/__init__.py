@@ -14,7 +14,7 @@ from pathlib import Path
 
 from lineproof.errors import UserError
 
-DONE, FINDING, WRONG_INPUT, STOPPED = 0, 1, 2, 130
+DONE, STOPPED = 0, 130
 
 
 class _Version(argparse.Action):
@@ -101,7 +101,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         sys.stdout.flush()
         for fault in error.faults:
             sys.stderr.write(f"{_visible(fault)}\n")
-        return WRONG_INPUT
+        return error.exit_code
     except KeyboardInterrupt:
         sys.stderr.write("stopped; nothing has been written\n")
         return STOPPED

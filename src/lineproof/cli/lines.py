@@ -51,8 +51,8 @@ def read_records(path: Path) -> list[Record]:
 
 
 def _from_notebook(path: Path) -> list[Record]:
-    from lineproof.notebook.cells import cells_of, load_notebook  # noqa: PLC0415
-    from lineproof.notebook.read import record_of  # noqa: PLC0415
+    from lineproof.notebook.cells import cells_of, load_notebook  # noqa: PLC0415 - by kind of file
+    from lineproof.notebook.read import record_of  # noqa: PLC0415 - by kind of file
 
     return [record_of(cells_of(load_notebook(path), str(path)), str(path))]
 
@@ -67,13 +67,13 @@ def _content(path: Path) -> bytes:
 
 
 def _from_pdf(path: Path) -> list[Record]:
-    from lineproof.package import records_in_pdf  # noqa: PLC0415
+    from lineproof.package import records_in_pdf  # noqa: PLC0415 - by kind of file
 
     return [Record.from_data(data) for data in records_in_pdf(_content(path))]
 
 
 def _from_html(path: Path) -> list[Record]:
-    from lineproof.package import records_in_html  # noqa: PLC0415
+    from lineproof.package import records_in_html  # noqa: PLC0415 - by kind of file
 
     return [Record.from_data(data) for data in records_in_html(_content(path).decode())]
 

@@ -22,6 +22,9 @@ from lineproof.notebook.read import (
 )
 from lineproof.record import Record
 
+MOST_CHANGES = 25
+"""Differences listed one by one; of more only the number is told."""
+
 
 @dataclass(frozen=True, slots=True)
 class Stored:
@@ -92,9 +95,6 @@ def _rerun(stored: Stored, progress: Progress) -> Rerun:
     calc = calc_of(json.loads(text), name)
     changes = compare(stored.record, calc.record) if stored.record is not None else []
     return Rerun(stored, text, calc, tuple(changes))
-
-
-MOST_CHANGES = 25
 
 
 def report_changes(rerun: Rerun) -> list[str]:

@@ -5,16 +5,14 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from functools import cached_property
-from typing import TYPE_CHECKING, Any, Literal
+from typing import Any, Literal
 
 from lineproof.errors import UserError
 from lineproof.formula.compiled import COMPARE, compile_step, compile_tree
 from lineproof.formula.grammar import parse_criterion, parse_line
 from lineproof.formula.notation import Notation
 from lineproof.formula.tree import Name, Tree, names_of
-
-if TYPE_CHECKING:
-    from lineproof.quantity.units import Unit
+from lineproof.quantity.units import unit_named
 
 System = Literal["N-mm", "kN-m"]
 FROM_MEMORY = "from memory"
@@ -108,10 +106,12 @@ def formula(
     symbol, tree = parse_line(text)
     if unit is None:
         if symbol not in notation:
-            raise UserError(f"{symbol}: say in which unit it is printed: unit='kN.m'")
+            raise UserError(
+                f"{symbol}: say in which unit it is printed: unit='kN.m' (unit='' for a number)"
+            )
         unit = notation[symbol].unit
     return Formula(
-        text, symbol, tree, names_of(tree), _spelling(unit), clause, title, basis,
+        text, symbol, tree, names_of(tree), unit_named(unit).spelling, clause, title, basis,
         dict(numbers or {}), system, notation,
     )  # fmt: skip
 
@@ -143,7 +143,7 @@ def criterion(
     if unit is None:
         unit = _unit_of_side(left, right, notation)
     return Criterion(
-        text, left, sign, right, names, _spelling(unit), clause, title, basis, yes, no,
+        text, left, sign, right, names, unit_named(unit).spelling, clause, title, basis, yes, no,
         key or _slug(text), dict(numbers or {}), system, notation, proof,
     )  # fmt: skip
 
@@ -153,13 +153,6 @@ def _unit_of_side(left: Tree, right: Tree, notation: Notation) -> str:
         if isinstance(side, Name) and side.id in notation:
             return notation[side.id].unit
     return ""
-
-
-def _spelling(unit: str) -> str:
-    from lineproof.quantity.units import unit_named  # noqa: PLC0415 - keeps `formula` importable alone
-
-    known: Unit = unit_named(unit)
-    return known.spelling
 
 
 def _slug(text: str) -> str:

@@ -21,7 +21,6 @@ FUNCTIONS = {
 }  # fmt: skip
 """Functions of the grammar with their least and most arguments; angles are in degrees."""
 
-COMPARISONS = ("<=", ">=", "<", ">")
 _OPERATORS: dict[type[ast.operator], str] = {
     ast.Add: "+",
     ast.Sub: "-",

@@ -50,10 +50,6 @@ class Call:
 
 Tree = Number | Name | Negative | Binary | Call
 
-PRECEDENCE = {"+": 1, "-": 1, "*": 2, "/": 2, "**": 4}
-"""Binding strength of the operators; a sign binds between ``/`` and ``**``."""
-SIGN_PRECEDENCE = 3
-
 
 def walk(tree: Tree) -> Iterator[Tree]:
     """Give every node of the tree, left to right, parents first."""

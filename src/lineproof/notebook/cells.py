@@ -33,7 +33,7 @@ class Cell:
         """How an error calls the cell: its number and its first line."""
         lines = [line for line in self.source.splitlines() if line.strip()]
         first = lines[0].strip() if lines else ""
-        shown = first if len(first) <= 40 else first[:39] + "…"  # noqa: PLR2004
+        shown = first if len(first) <= 40 else first[:39] + "…"  # noqa: PLR2004 - part of a line
         return f"cell {self.number} ({shown})" if shown else f"cell {self.number}"
 
 

@@ -111,4 +111,4 @@ def _same(old: Entry, new: Entry, what: str) -> bool:
 
 def _short(value: object) -> str:
     text = value if isinstance(value, str) else json.dumps(value, ensure_ascii=False)
-    return repr(text if len(text) <= 120 else text[:119] + "…")  # noqa: PLR2004
+    return repr(text if len(text) <= 120 else text[:119] + "…")  # noqa: PLR2004 - one line

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import base64
 import hashlib
+import sys
 from collections.abc import Mapping
 from html import escape
 from typing import Any
@@ -88,8 +89,6 @@ def _up_to(view: PartView) -> list[Any]:
 
 
 def _shell() -> Any:
-    import sys  # noqa: PLC0415 - beside its only use
-
     ipython = sys.modules.get("IPython")
     return ipython.get_ipython() if ipython is not None else None
 

@@ -8,10 +8,9 @@ from collections.abc import Callable, Mapping
 from pathlib import Path
 from typing import Any
 
-from lineproof.errors import UserError
+from lineproof.errors import SHOWN_PREFIX, UserError
 from lineproof.notebook.cells import cells_of, joined
 
-_WRONG_INPUT = "Wrong input: "
 _LANGUAGE = {"file_extension": ".py", "mimetype": "text/x-python", "name": "python"}
 _KERNEL = {"display_name": "Python 3 (ipykernel)", "language": "python", "name": "python3"}
 _TIMINGS = ("execution", "ExecuteTime", "papermill")
@@ -28,7 +27,7 @@ def execute(
     :class:`UserError` with the cell, and what it said, at the first cell that fails.
     """
     import nbformat  # noqa: PLC0415 - Jupyter is imported on first use only
-    from nbclient.exceptions import (  # noqa: PLC0415
+    from nbclient.exceptions import (  # noqa: PLC0415 - as above
         CellExecutionError,
         CellTimeoutError,
         DeadKernelError,
@@ -48,7 +47,7 @@ def execute(
 
 
 def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progress | None) -> None:
-    from nbclient import NotebookClient  # noqa: PLC0415
+    from nbclient import NotebookClient  # noqa: PLC0415 - Jupyter, on first use only
 
     codes = [n for n, cell in enumerate(notebook.cells) if cell.cell_type == "code"]
     done = progress or (lambda _done, _total: None)
@@ -81,9 +80,9 @@ def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progre
 
 def _kernel_manager(scratch: Path) -> Any:
     """Return a kernel manager that starts this interpreter, whatever kernels are installed."""
-    from ipykernel.kernelspec import RESOURCES, get_kernel_dict  # noqa: PLC0415
-    from jupyter_client.kernelspec import KernelSpec  # noqa: PLC0415
-    from jupyter_client.manager import AsyncKernelManager  # noqa: PLC0415
+    from ipykernel.kernelspec import RESOURCES, get_kernel_dict  # noqa: PLC0415 - as above
+    from jupyter_client.kernelspec import KernelSpec  # noqa: PLC0415 - as above
+    from jupyter_client.manager import AsyncKernelManager  # noqa: PLC0415 - as above
 
     class ThisPython(AsyncKernelManager):
         @property
@@ -143,7 +142,7 @@ def _join_streams(outputs: list[Any]) -> list[Any]:
 
 def _stored(notebook: Any) -> str:
     """Return the text of an executed notebook as it is saved."""
-    from nbformat import v4  # noqa: PLC0415
+    from nbformat import v4  # noqa: PLC0415 - Jupyter, on first use only
 
     for cell in notebook.cells:
         if cell.cell_type == "code":
@@ -169,7 +168,7 @@ def failures(notebook: Mapping[str, Any], name: str) -> list[str]:
 def _said(output: Mapping[str, Any]) -> list[str]:
     """Tell a fault of the input, shown as such by the sheet, from any other exception."""
     lines = [str(line) for line in output.get("traceback", ())]
-    if lines and all(line.startswith(_WRONG_INPUT) for line in lines):
-        return [line.removeprefix(_WRONG_INPUT) for line in lines]
+    if lines and all(line.startswith(SHOWN_PREFIX) for line in lines):
+        return [line.removeprefix(SHOWN_PREFIX) for line in lines]
     value = str(output.get("evalue", "")).strip().splitlines()
     return [": ".join(filter(None, [str(output.get("ename", "")), value[-1] if value else ""]))]

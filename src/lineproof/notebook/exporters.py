@@ -65,7 +65,7 @@ class CalcPackageHtml(_CalcPackage):
 
 def _printed(notebook: Mapping[str, Any], name: str, printer: str) -> str | bytes:
     from lineproof import package  # noqa: PLC0415 - imported to print, not to list
-    from lineproof.notebook.read import calc_of  # noqa: PLC0415
+    from lineproof.notebook.read import calc_of  # noqa: PLC0415 - as above
 
     calc = calc_of(notebook, name)
     made: str | bytes = getattr(package, printer)(package.build_package([calc.record], [calc.walk]))

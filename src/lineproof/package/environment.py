@@ -123,7 +123,7 @@ def _loader() -> jinja2.BaseLoader:
 
 
 def _typst_environment() -> jinja2.Environment:
-    import jinja2  # noqa: PLC0415
+    import jinja2  # noqa: PLC0415 - as in _loader
 
     @jinja2.pass_context
     def intern(context: jinja2.runtime.Context, value: object) -> str:
@@ -143,8 +143,8 @@ def _typst_environment() -> jinja2.Environment:
 
 
 def _html_environment() -> jinja2.Environment:
-    import jinja2  # noqa: PLC0415
-    from markupsafe import Markup  # noqa: PLC0415
+    import jinja2  # noqa: PLC0415 - as in _loader
+    from markupsafe import Markup  # noqa: PLC0415 - as in _loader
 
     def finish(value: object) -> object:
         if isinstance(value, Markup):

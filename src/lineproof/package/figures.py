@@ -2,15 +2,12 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Mapping
 from typing import Any
 
 from lineproof.drawing import from_json, svg
 from lineproof.package.environment import Verbatim
 from lineproof.typeset.glyphs import printable_tree
-
-_SIZE = re.compile(r'<svg[^>]*?\bwidth="([0-9.]+)(?:mm)?"')
 
 
 def drawing(figure: Mapping[str, Any]) -> Verbatim:

@@ -8,6 +8,7 @@ from typing import Any
 from lineproof.package.environment import html_environment
 from lineproof.package.figures import drawing
 from lineproof.package.model import Package
+from lineproof.record import MIME
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import MISSING_NOTE
 
@@ -42,7 +43,7 @@ def to_html(package: Package) -> str:
     from markupsafe import Markup  # noqa: PLC0415 - comes with jinja2, only printing needs it
 
     def picture(figure: Mapping[str, Any]) -> str:
-        return Markup(_inline(drawing(figure).text))  # noqa: S704 - the drawing escapes its texts
+        return Markup(drawing(figure).text)  # noqa: S704 - the drawing escapes its texts
 
     template = html_environment().get_template("package.html.j2")
     return template.render(
@@ -52,13 +53,9 @@ def to_html(package: Package) -> str:
         ranges=unicode_ranges,
         style=Markup(_style()),  # noqa: S704 - our own style sheet
         missing_note=MISSING_NOTE,
+        record_mime=MIME,
     )
 
 
 def _style() -> str:
     return (folder("templates") / "package.css").read_text(encoding="utf-8")
-
-
-def _inline(svg: str) -> str:
-    """Return a drawing for use inside HTML, where an XML declaration is not allowed."""
-    return svg[svg.index("<svg") :]

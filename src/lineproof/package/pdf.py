@@ -15,13 +15,13 @@ from lineproof.errors import UserError
 from lineproof.package.environment import Interned, Verbatim, typst_environment
 from lineproof.package.figures import drawing, paper_width
 from lineproof.package.model import Package
+from lineproof.record import MIME
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import MISSING_NOTE
 
 if TYPE_CHECKING:
     import typst
 
-MIME = "application/vnd.lineproof.record+json"
 STANDARDS = ["a-3a", "ua-1"]
 _TOO_LONG = "PDF string is longer than"
 _local = threading.local()
@@ -53,11 +53,8 @@ def typst_source(package: Package) -> tuple[str, str]:
         month=str(package.facts.date.month),
         day=str(package.facts.date.day),
     )
-    if interned.long_words:
-        source = "#let break-long-words = true\n" + source
-    else:
-        source = "#let break-long-words = false\n" + source
-    return source, interned.to_json()
+    break_long_words = "true" if interned.long_words else "false"
+    return f"#let break-long-words = {break_long_words}\n{source}", interned.to_json()
 
 
 def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
@@ -97,7 +94,7 @@ def _compiler() -> Any:
     """Return this thread's compiler; one compiler cannot serve two threads at once."""
     made = getattr(_local, "compiler", None)
     if made is None:
-        import typst  # noqa: PLC0415
+        import typst  # noqa: PLC0415 - only printing needs it
 
         made = _local.compiler = typst.Compiler(root=str(_empty_root()), font_paths=_fonts())
     return made
@@ -106,7 +103,7 @@ def _compiler() -> Any:
 @cache
 def _fonts() -> typst.Fonts:
     """Return the fonts bundled with Typst and our own; never those of the machine."""
-    import typst  # noqa: PLC0415
+    import typst  # noqa: PLC0415 - only printing needs it
 
     return typst.Fonts(
         include_system_fonts=False,

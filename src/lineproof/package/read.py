@@ -11,11 +11,10 @@ from contextlib import contextmanager
 from typing import Any
 
 from lineproof.errors import UserError
+from lineproof.record import LARGEST_RECORD, MIME
 
-LARGEST_RECORD = 32_000_000
 _TAIL = 65_536
-_MIME = "application/vnd.lineproof.record+json"
-_OPENED = re.compile(rf'<script type="{re.escape(_MIME)}"[^<>]*>', re.IGNORECASE)
+_OPENED = re.compile(rf'<script type="{re.escape(MIME)}"[^<>]*>', re.IGNORECASE)
 _CLOSED = re.compile(r"</script>", re.IGNORECASE)
 _SUFFIX = ".lineproof.json"
 _PLACE = re.compile(r"Record (\d{1,4}) of ")
@@ -61,7 +60,7 @@ def records_in_pdf(content: bytes) -> list[dict[str, Any]]:
 
 def _attachments(content: bytes) -> list[tuple[str, bytes]]:
     import pypdf  # noqa: PLC0415 - only reading a PDF needs it
-    import pypdf.errors  # noqa: PLC0415
+    import pypdf.errors  # noqa: PLC0415 - as above
 
     if b"startxref" not in content[-_TAIL:]:  # else the reader searches it all, line by line
         raise UserError("this PDF is damaged, its end is missing; give the whole file")
@@ -73,8 +72,7 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
         return sorted(found, key=lambda pair: order.get(pair[0], len(order)))
     except pypdf.errors.FileNotDecryptedError:
         raise UserError("this PDF is encrypted; give it without a password") from None
-    # A damaged file makes the reader fail in any of its layers.
-    except Exception as error:  # noqa: BLE001
+    except Exception as error:  # noqa: BLE001 - damage makes it fail in any of its layers
         reason = f"{type(error).__name__}: {error}"[:80]
         raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
 

@@ -186,13 +186,9 @@ def factor(unit: str, into: str) -> Decimal:
     """Return by what a number in ``unit`` is multiplied to stand in ``into`` (exact decimal)."""
     ureg = registry(Decimal)
     one = ureg.Quantity(Decimal(1), UNITS[unit].expression)
-    converted = one.to(UNITS[into].expression).magnitude
+    converted = Decimal(one.to(UNITS[into].expression).magnitude)
     # Pint multiplies by way of base units; 28 digits leave noise such as 1.000...001.
-    return +Decimal(converted).quantize(Decimal(1).scaleb(_exponent(converted) - 20)).normalize()
-
-
-def _exponent(number: Decimal) -> int:
-    return number.adjusted()
+    return converted.quantize(Decimal(1).scaleb(converted.adjusted() - 20)).normalize()
 
 
 @cache

@@ -3,9 +3,10 @@
 from lineproof.record.entry import Entry, Part, digest_of
 from lineproof.record.procedures import Procedure, procedure
 from lineproof.record.recompute import Difference, recompute
-from lineproof.record.record import MIME, Record
+from lineproof.record.record import LARGEST_RECORD, MIME, Record
 
 __all__ = [
+    "LARGEST_RECORD",
     "MIME",
     "Difference",
     "Entry",

@@ -154,8 +154,9 @@ class _Builder:
     def _found(self, entry: Entry) -> dict[str, Any]:
         source = entry.source
         made = source.procedure
-        closing_args: tuple[Entry, ...] = entry.extra["closing_args"]  # type: ignore[index]
-        sides: tuple[float, float] = entry.extra["closing_sides"]  # type: ignore[index]
+        extra = entry.extra or {}
+        closing_args: tuple[Entry, ...] = extra["closing_args"]
+        sides: tuple[float, float] = extra["closing_sides"]
         test = source.closing
         holds = test.holds(*sides)
         return {

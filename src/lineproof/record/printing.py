@@ -34,7 +34,9 @@ _NOT_METRIC = frozenset(
 )  # fmt: skip
 _LONGEST_TYPED = 15
 _RESIDUAL = 0.01
+"""Share of the other side below which a side is but the residual of nearly equal numbers."""
 _NOTHING = 0.001
+"""Utilisation below which 0.00 is printed."""
 
 
 def exact_decimal(entry: Entry) -> Decimal | None:

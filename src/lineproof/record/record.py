@@ -11,7 +11,9 @@ from lineproof.record.build import SCHEMA
 from lineproof.record.validate import check_record
 
 MIME = "application/vnd.lineproof.record+json"
+"""By which a record is known in a notebook, an HTML page and a PDF."""
 LARGEST_RECORD = 32_000_000
+"""Characters of a record that is still read."""
 
 
 class Record:

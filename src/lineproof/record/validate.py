@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import Any
+from typing import Any, get_args
 
 from lineproof.errors import FaultList, UserError
-from lineproof.formula import names_of, parse_criterion, parse_line
+from lineproof.formula import System, names_of, parse_criterion, parse_line
 from lineproof.formula.notation import check_id
 from lineproof.quantity.units import UNITS
 from lineproof.record.entry import (
@@ -27,7 +27,7 @@ from lineproof.record.plain_data import check_plain, is_number, is_number_text, 
 Data = Mapping[str, Any]
 _KINDS = (*VALUES, *CRITERIA, FIGURE, NOTE, TABLE)
 _LONGEST_ID = 80
-_SYSTEMS = ("N-mm", "kN-m")
+_SYSTEMS = get_args(System)
 
 
 def check_record(data: Data) -> None:

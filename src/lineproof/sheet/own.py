@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable
 
-from lineproof.errors import UserError
 from lineproof.formula import (
     Criterion,
     Formula,
@@ -13,9 +12,7 @@ from lineproof.formula import (
     System,
     criterion,
     formula,
-    parse_line,
 )
-from lineproof.quantity import unit_named
 
 Units = Callable[[Iterable[str]], dict[str, str]]
 
@@ -24,13 +21,6 @@ def own_formula(
     text: str, unit: str | None, title: str, system: System, notation: Notation
 ) -> Formula:
     """Read a designer's formula; the unit comes from the call or from the notation."""
-    symbol, _ = parse_line(text)
-    if unit is None and symbol not in notation:
-        raise UserError(
-            f"{symbol}: say in which unit it is printed: unit='kN.m' (unit='' for a number)"
-        )
-    if unit is not None:
-        unit = unit_named(unit).spelling
     return formula(text, unit=unit, title=title, system=system, notation=notation)
 
 

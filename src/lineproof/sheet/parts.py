@@ -11,6 +11,7 @@ from lineproof.record import Entry, Part
 from lineproof.record.entry import VALUES
 
 _CALLS_NAMED = 3
+_LONGEST_ID = 60
 
 
 class Parts:
@@ -172,5 +173,16 @@ class Parts:
 def check_key(key: str) -> None:
     """Refuse a key that cannot stand in an id."""
     plain = key.replace("-", "").replace("_", "")
-    if not (plain.isascii() and plain.isalnum() and len(key) <= 60 and key[0].isalnum()):  # noqa: PLR2004
-        raise UserError(f"key {key[:60]!r}: use letters, digits and hyphens, such as 'flexure-2'")
+    if not (plain.isascii() and plain.isalnum() and len(key) <= _LONGEST_ID and key[0].isalnum()):
+        shown = repr(key[:_LONGEST_ID])
+        raise UserError(f"key {shown}: use letters, digits and hyphens, such as 'flexure-2'")
+
+
+def check_calc_id(calc_id: object) -> None:
+    """Refuse an id that could not stand in a running head or name an attachment."""
+    text = calc_id if isinstance(calc_id, str) else ""
+    if not text.strip() or not text.isprintable() or len(text) > _LONGEST_ID:
+        raise UserError(
+            f"calc id: {ascii(calc_id)[:_LONGEST_ID]} is no short text; write the beam's mark, "
+            "such as 'B7'"
+        )

@@ -95,13 +95,26 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
         given = facts.get(rows, [])
         if not (isinstance(given, list) and all(isinstance(row, dict) for row in given)):
             faults.append(f"{path}: {rows!r} must be a list of tables; write [[{rows}]]")
-    faults += _unknown(path, facts)
+    faults += [*_unknown(path, facts), *_unsigned(path, facts)]
     if not isinstance(facts.get("codes"), dict) or "pair" not in facts["codes"]:
         faults.append(f"{path}: no code pair; write under [codes]: pair = 'NBC 2015 + A23.3-14'")
     elif not isinstance(facts["codes"]["pair"], str):
         faults.append(f"{path}: codes.pair is no text; write pair = 'NBC 2015 + A23.3-14'")
     if faults:
         raise UserError(faults)
+
+
+def _unsigned(path: Path, facts: dict[str, Any]) -> list[str]:
+    """Return a fault per confirmation that does not say which clause, who and when."""
+    rows = facts.get("confirmed", [])
+    return [
+        f"{path}: confirmed: row {number} has no {key!r}; write clause, by and on, such as "
+        "clause = '10.1.7', by = 'A.B.', on = 2026-11-20"
+        for number, row in enumerate(rows if isinstance(rows, list) else [], 1)
+        if isinstance(row, dict)
+        for key in ("clause", "by", "on")
+        if not str(row.get(key, "")).strip()
+    ]
 
 
 def _unknown(path: Path, facts: dict[str, Any]) -> list[str]:

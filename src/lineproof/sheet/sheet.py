@@ -20,13 +20,10 @@ from lineproof.record.sources import FoundSource, GivenSource, LookupSource, Sho
 from lineproof.sheet.kinds import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion, own_formula
-from lineproof.sheet.parts import Parts, check_key
+from lineproof.sheet.parts import Parts, check_calc_id, check_key
 from lineproof.sheet.project import read_project
 from lineproof.sheet.tables import LookupTable
 
-__all__ = ["PartView", "Sheet"]
-
-LONGEST_ID = 60
 _NOT_COMPUTED = (ArithmeticError, ValueError, TypeError)
 """What arithmetic without a real result raises; TypeError where a complex root is compared."""
 
@@ -66,7 +63,7 @@ class Sheet(Parts):
         notation: Notation | None = None,
     ) -> None:
         super().__init__()
-        _check_calc_id(calc_id)
+        check_calc_id(calc_id)
         self.calc = {"id": calc_id, "title": title}
         self.project: dict[str, Any] = dict(project or {})
         self.notation = notation or Notation(())
@@ -391,13 +388,3 @@ class Sheet(Parts):
             parts, calc=self.calc, member=self.member, project=self.project, codes=self.codes,
             notation=self.notation, scope=self.scope, not_covered=self.not_covered,
         )  # fmt: skip
-
-
-def _check_calc_id(calc_id: object) -> None:
-    """Refuse an id that could not stand in a running head or name an attachment."""
-    text = calc_id if isinstance(calc_id, str) else ""
-    if not text.strip() or not text.isprintable() or len(text) > LONGEST_ID:
-        raise UserError(
-            f"calc id: {ascii(calc_id)[:LONGEST_ID]} is no short text; write the beam's mark, "
-            "such as 'B7'"
-        )

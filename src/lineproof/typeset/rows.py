@@ -9,6 +9,7 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from typing import Any
 
+from lineproof.formula import FROM_MEMORY
 from lineproof.formula.notation import Notation, Symbol
 from lineproof.quantity.units import UNITS
 from lineproof.typeset.chains import Chain, criterion_chains, line_chain
@@ -27,7 +28,7 @@ from lineproof.typeset.values import (
 
 Entry = Mapping[str, Any]
 
-_SILENT_BASES = frozenset({"", "from memory", "mechanics"})
+_SILENT_BASES = frozenset({"", FROM_MEMORY, "mechanics"})
 HOLDS, FAILS, ACCEPTED = "holds", "does not hold", "accepted, does not hold"
 
 
