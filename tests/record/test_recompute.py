@@ -15,8 +15,8 @@ from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 
 from lineproof.record import Record, digest_of, recompute
+from lineproof.record.printed_checks import rounds_to
 from lineproof.record.procedures import PROCEDURES
-from lineproof.record.shown import rounds_to
 
 Data = dict[str, Any]
 SRC = Path(__file__).resolve().parents[2] / "src"

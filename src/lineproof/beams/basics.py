@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
+from lineproof.beams.bottom_bars import BARS
 from lineproof.beams.flexure import YIELD_CLAUSE, confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
-from lineproof.beams.layout import BARS
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
 from lineproof.sheet import Sheet

@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from lineproof.beams.figures import MomentLevel
 from lineproof.beams.flexure import midspan, resistance
 from lineproof.beams.inputs import Shape
-from lineproof.beams.pictures import record_capacity_figure
+from lineproof.beams.record_figures import record_capacity_figure
 from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit

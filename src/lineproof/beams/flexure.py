@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
+from lineproof.beams.bottom_bars import COMPRESSION_BARS
 from lineproof.beams.inputs import Shape
 from lineproof.beams.section import compression_zone
 from lineproof.beams.steps import Steps
@@ -167,7 +168,7 @@ def _check_ratio(value: object) -> None:
 def record_doubly(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
     """Record the resistance with the compression bars counted, displaced concrete taken off."""
     steps = midspan(sheet, shape)
-    top = {n: sheet.entry(f"compression-bars/{n}") for n in ("A_sp", "d_p")}
+    top = {n: sheet.entry(f"{COMPRESSION_BARS}/{n}") for n in ("A_sp", "d_p")}
     steps.bind(M_f=sheet.entry("loads/M_f"), **top)
     with sheet.part(FLEXURE, "Moment resistance at midspan, compression bars counted"):
         doubly(steps, shape)

@@ -7,6 +7,7 @@ from typing import Any
 
 from lineproof.beams import basics, choice, loading
 from lineproof.beams.bars import BarLayer, BarLayers, bars_text
+from lineproof.beams.bottom_bars import BARS, COMPRESSION_BARS, record_bars, refuse_unfit
 from lineproof.beams.capacity import record_capacity
 from lineproof.beams.cracks import CRACKS, record_cracks
 from lineproof.beams.flexure import (
@@ -20,9 +21,8 @@ from lineproof.beams.flexure import (
     record_required,
 )
 from lineproof.beams.inputs import FloorBeamInputs, read_floor_beam
-from lineproof.beams.layout import BARS, record_bars, refuse_unfit
 from lineproof.beams.minimum_steel import MINIMUM, record_minimum
-from lineproof.beams.pictures import moment_level, record_section_figure, record_strain_figure
+from lineproof.beams.record_figures import moment_level, record_section_figure, record_strain_figure
 from lineproof.beams.second_path import SECOND_PATH, record_second_path
 from lineproof.beams.section import SECTION, record_section
 from lineproof.beams.steps import Steps
@@ -34,7 +34,6 @@ from lineproof.standards.a23_3 import minimum
 from lineproof.standards.catalogue import NOTATION
 from lineproof.standards.codes import CodePair
 
-COMPRESSION_BARS = "compression-bars"
 SCOPE = "preliminary: flexure only"
 NOT_COVERED = (
     {"check": "Concentrated live loads", "clause": "NBC 4.1.5.9"},

@@ -209,7 +209,7 @@ def read_floor_beam(
         "waive_minimum_at_ends": take("waive_minimum_at_ends", _yes_or_no),
     }  # fmt: skip
     take("web_openings", _no_openings)
-    _check_density(fields, given, reader.faults)
+    check_density(fields, given, reader.faults)
     _check_flange(fields, given, reader.faults)
     reader.smaller("h_f", "h", fields)
     _check_geometry(fields, given, reader.faults)
@@ -276,7 +276,8 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
         )
 
 
-def _check_density(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+def check_density(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    """Note a fault if concrete called of normal density is lighter than that."""
     gamma_c = fields["gamma_c"]
     if fields["density"] == "normal" and gamma_c is not None and gamma_c.value < LEAST_NORMAL:
         faults.add(

@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
+from lineproof.beams.bottom_bars import COMPRESSION_BARS
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import Shape
-from lineproof.beams.pictures import record_curve_figure
+from lineproof.beams.record_figures import record_curve_figure
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
 from lineproof.record import Entry
@@ -66,7 +67,7 @@ def record_second_path(sheet: Sheet, shape: Shape) -> None:
     case = "two layers" if "A_s2" in steps.place else "one layer"
     if "C_s" in flexure:
         case = "compression bars"
-        steps.bind(**{n: sheet.entry(f"compression-bars/{n}") for n in ("A_sp", "d_p")})
+        steps.bind(**{n: sheet.entry(f"{COMPRESSION_BARS}/{n}") for n in ("A_sp", "d_p")})
     key = (zone_of(shape), case)
     with sheet.part(SECOND_PATH, "Second path: layers and strains"):
         record_proof(steps, key, flexure["M_r"])

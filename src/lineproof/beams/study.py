@@ -6,6 +6,7 @@ from typing import Any
 
 from lineproof.beams.bars import BarLayers, bars_text, read_bars
 from lineproof.beams.basics import GIVEN, MATERIALS, record_materials
+from lineproof.beams.bottom_bars import BARS, record_bars, refuse_unfit
 from lineproof.beams.capacity import SHARES, record_capacity
 from lineproof.beams.flexure import (
     BALANCED,
@@ -16,9 +17,16 @@ from lineproof.beams.flexure import (
     resistance,
 )
 from lineproof.beams.floor_beam import prepare
-from lineproof.beams.inputs import SHAPES, InputReader, Shape, one_of, read_input, row_of
-from lineproof.beams.layout import BARS, record_bars, refuse_unfit
-from lineproof.beams.pictures import moment_level, record_section_figure, record_strain_figure
+from lineproof.beams.inputs import (
+    SHAPES,
+    InputReader,
+    Shape,
+    check_density,
+    one_of,
+    read_input,
+    row_of,
+)
+from lineproof.beams.record_figures import moment_level, record_section_figure, record_strain_figure
 from lineproof.beams.second_path import SECOND_PATH, record_second_path
 from lineproof.beams.section import SECTION, record_gross
 from lineproof.quantity import QuantityInput
@@ -135,6 +143,7 @@ def section_study(
         ("density", DENSITY_FACTORS),
     ):
         reader.take(name, row_of, table)
+    check_density({**read, "density": density}, given, reader.faults)
     reader.smaller("b_w", "b_f", read)
     reader.smaller("h_f", "h", read)
     reader.smaller("cover", "h_f", read)

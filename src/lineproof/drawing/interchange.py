@@ -9,7 +9,7 @@ from __future__ import annotations
 from dataclasses import MISSING, fields
 from typing import Any
 
-from lineproof.drawing import checks
+from lineproof.drawing import json_values
 from lineproof.drawing.shapes import (
     Arc,
     Arrow,
@@ -99,8 +99,8 @@ def from_json(data: object) -> Figure:
 
 def _value(place: str, name: str, value: object, faults: FaultList) -> Any:
     try:
-        return checks.BY_FIELD[name](value)
-    except checks.FaultError as error:
+        return json_values.BY_FIELD[name](value)
+    except json_values.FaultError as error:
         faults.add(f"{place} {error}")
         return None
 
@@ -139,7 +139,7 @@ def _shape(place: str, data: object, faults: FaultList) -> Shape | None:
 
 def _check_size(figure: Figure, faults: FaultList) -> None:
     """Keep the drawing near its paper and its hatch countable."""
-    points = [point for shape in figure.shapes for point in checks.points_of(shape)]
+    points = [point for shape in figure.shapes for point in json_values.points_of(shape)]
     if len(points) > MAX_POINTS:
         faults.add(f"figure: {len(points)} points; at most {MAX_POINTS} can be drawn")
         return

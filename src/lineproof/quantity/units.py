@@ -114,6 +114,12 @@ UNITS: dict[str, Unit] = {
     for spelling, expression in spellings.items()
 }
 
+NOT_METRIC = frozenset(
+    {"in", "ft", "in2", "ft2", "in3", "ft3", "in4", "lbf", "kip", "lbf.ft", "kip.in", "kip.ft",
+     "plf", "klf", "psi", "ksi", "psf", "ksf", "pcf", "lb/ft3", "lb", "lb/ft", "min"}
+)  # fmt: skip
+"""Units of the list in which a value is printed as typed and converted."""
+
 _SAME_UNIT = {
     "degrees": "deg", "degree": "deg", "°": "deg", "kN/m2": "kPa", "N/mm2": "MPa", "kNm": "kN.m",
     "kip.ft.": "kip.ft", "kips": "kip", "hours": "h", "hour": "h", "days": "d", "-": "",

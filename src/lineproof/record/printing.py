@@ -25,13 +25,9 @@ from lineproof.quantity.digits import (
     significant,
     start_digits,
 )
-from lineproof.quantity.units import UNITS, factor, internal_factor, system_unit
+from lineproof.quantity.units import NOT_METRIC, UNITS, factor, internal_factor, system_unit
 from lineproof.record.entry import FOUND, GIVEN, LINE, LOOKUP, Entry
 
-_NOT_METRIC = frozenset(
-    {"in", "ft", "in2", "ft2", "in3", "ft3", "in4", "lbf", "kip", "lbf.ft", "kip.in", "kip.ft",
-     "plf", "klf", "psi", "ksi", "psf", "ksf", "pcf", "lb/ft3", "lb", "lb/ft", "min"}
-)  # fmt: skip
 _LONGEST_TYPED = 15
 _RESIDUAL = 0.01
 """Share of the other side below which a side is but the residual of nearly equal numbers."""
@@ -48,7 +44,7 @@ def exact_decimal(entry: Entry) -> Decimal | None:
         return None
     typed = entry.source.typed
     exact: Decimal = typed.exact
-    longest = MOST_DIGITS if typed.unit in _NOT_METRIC else _LONGEST_TYPED
+    longest = MOST_DIGITS if typed.unit in NOT_METRIC else _LONGEST_TYPED
     short = exact.normalize()
     return short if len(short.as_tuple().digits) <= longest else None
 
@@ -245,7 +241,7 @@ def _by_powers_of_ten(unit: str, target: str) -> bool:
 
 def _given(entry: Entry) -> dict[str, Any]:
     typed = entry.source.typed
-    if typed.unit not in _NOT_METRIC:
+    if typed.unit not in NOT_METRIC:
         return {"result": typed.number, "unit": typed.unit}
     digits = START_DIGITS
     exact = exact_decimal(entry)

@@ -13,7 +13,7 @@ from lineproof.formula.compiled import COMPARE, compile_tree
 from lineproof.formula.tree import Tree
 from lineproof.quantity import read_quantity
 from lineproof.quantity.units import internal_factor
-from lineproof.record import shown
+from lineproof.record import printed_checks
 from lineproof.record.entry import CHECK, CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES
 from lineproof.record.printing import ratio
 from lineproof.record.procedures import recall, run
@@ -58,14 +58,14 @@ def recompute(record: Record) -> list[Difference]:
             differences.append(Difference(entry["id"], "value", stored, f"failed: {error}"))
             if entry["kind"] in VALUES:
                 values.setdefault(entry["id"], _stored(entry["value"], entry["unit"]))
-    again = shown.digests(record.entries)
+    again = printed_checks.digests(record.entries)
     differences += [
         Difference(i, "digest", entry["digest"], again[i])
         for i, entry in record.entries.items()
         if entry["digest"] != again[i]
     ]
     differences += [
-        Difference("record", *found) for found in shown.whole(record.data, record.entries)
+        Difference("record", *found) for found in printed_checks.whole(record.data, record.entries)
     ]
     return differences
 
@@ -90,12 +90,12 @@ def _differences(
 
 def _printed(
     entry: Mapping[str, Any], value: float, values: Mapping[str, float], units: Mapping[str, str]
-) -> Iterator[shown.Finding]:
-    yield from shown.printed_value(entry["printed"], value)
+) -> Iterator[printed_checks.Finding]:
+    yield from printed_checks.printed_value(entry["printed"], value)
     if entry["kind"] == GIVEN:
-        yield from shown.printed_typed(entry)
+        yield from printed_checks.printed_typed(entry)
     if entry["kind"] in (LINE, FOUND):
-        yield from shown.printed_arguments(entry, values, units)
+        yield from printed_checks.printed_arguments(entry, values, units)
 
 
 def _stored(value: float, unit: str) -> float:
@@ -144,12 +144,12 @@ def _criterion(
             yield Difference(entry_id, f"{what} side", f"{stored:.10g}", f"{value / scale:.10g}")
     if _truth(sign, left, right) not in (None, test["holds"]):
         yield Difference(entry_id, "truth", str(test["holds"]), str(not test["holds"]))
-    for found in shown.printed_comparison(test, (left, right)):
+    for found in printed_checks.printed_comparison(test, (left, right)):
         yield Difference(entry_id, *found)
-    for found in shown.printed_arguments(test, values, units):
+    for found in printed_checks.printed_arguments(test, values, units):
         yield Difference(entry_id, *found)
     if test.get("kind") == CHECK:
-        for found in shown.printed_utilisation(test, ratio(sign, left, right)):
+        for found in printed_checks.printed_utilisation(test, ratio(sign, left, right)):
             yield Difference(entry_id, *found)
 
 

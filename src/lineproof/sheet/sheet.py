@@ -17,9 +17,9 @@ from lineproof.record.build import build
 from lineproof.record.entry import CHECK, DECISION, FIGURE, FOUND, GIVEN, LINE, LOOKUP, NOTE, TABLE
 from lineproof.record.procedures import run
 from lineproof.record.sources import FoundSource, GivenSource, LookupSource, ShownSource
-from lineproof.sheet.kinds import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion, own_formula
+from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.parts import Parts, check_calc_id, check_key
 from lineproof.sheet.project import read_project
 from lineproof.sheet.tables import LookupTable

@@ -79,7 +79,7 @@ YIELDS = _criterion(
     title="Yield of the tension bars",
     basis=FROM_MEMORY,
     yes="The bars yield before the concrete crushes.",
-    no="The bars do NOT yield before the concrete crushes: less steel or a deeper section.",
+    no="The bars do NOT yield before the concrete crushes: less reinforcement or a deeper section.",
     key="yield",
 )
 UPPER_LAYER_YIELDS = _criterion(
@@ -88,7 +88,7 @@ UPPER_LAYER_YIELDS = _criterion(
     title="Yield of the upper layer of tension bars",
     basis=FROM_MEMORY,
     yes="The upper layer yields as well.",
-    no="The upper layer does NOT yield: less steel, or the bars in one layer.",
+    no="The upper layer does NOT yield: less reinforcement, or the bars in one layer.",
     key="yield-upper",
 )
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from lineproof.beams.bars import BarLayers
+from lineproof.beams.bottom_bars import COMPRESSION_BARS
 from lineproof.beams.figures import (
     BarRow,
     Force,
@@ -21,7 +22,7 @@ from lineproof.drawing import Dash, Figure, Runs, symbol, to_json
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import strain
+from lineproof.standards.a23_3 import compression_steel, strain
 
 _CURVE_POINTS = 35
 LEVER_ARM: Runs = (*symbol("d"), (" − ", "roman"), *symbol("a"), ("/2", "roman"))
@@ -56,7 +57,7 @@ def record_section_figure(
     bars = sheet.entries_of("bars")
     cover, d_bs = sheet.entry("given/c_c"), bars["d_bs"]
     edge = cover.value + d_bs.value
-    counted = _entries(sheet, "compression-bars")
+    counted = _entries(sheet, COMPRESSION_BARS)
     rows, slab, caption = _top_bars(
         sheet, counted or top, edge, "beside" if shape == "L" else "each side"
     )
@@ -116,7 +117,9 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
     c, d = flexure["c"].value, bars["d"].value
     block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
     a, eps_cu = block.value, sheet.find("eps_cu").value
-    tension = sheet.find("phi_s").value * bars["A_s"].value * sheet.find("f_y").value
+    tension = compression_steel.TENSION.function(
+        sheet.find("phi_s").value, bars["A_s"].value, sheet.find("f_y").value
+    )
     steel_strain = eps_cu * (d - c) / c
     h_f = sheet.find("h_f").value if shape != "rectangular" else 0.0
     forces, concrete = [], tension

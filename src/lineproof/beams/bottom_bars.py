@@ -9,6 +9,7 @@ from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars
 
 BARS = "bars"
+COMPRESSION_BARS = "compression-bars"
 
 
 def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) -> Entry:
