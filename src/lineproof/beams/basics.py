@@ -7,6 +7,7 @@ from lineproof.beams.flexure import YIELD_CLAUSE, confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
+from lineproof.record.build import EARLIER_EDITION
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, cover, materials, stress_block
 from lineproof.standards.codes import CodePair
@@ -19,6 +20,7 @@ COVER = "cover"
 
 def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
     """Record the inputs as typed."""
+    waived = ", waived at the ends where 10.5.1.3 lets it" if inputs.waive_minimum_at_ends else ""
     with sheet.part(GIVEN, "Given"):
         sheet.given("l", inputs.span)
         sheet.given("s_b", inputs.spacing)
@@ -43,7 +45,7 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
             f"concrete; use: {inputs.use}; exposure class {inputs.exposure}; fire-resistance "
             f"rating {inputs.fire_rating}, type {inputs.fire_aggregate} concrete; stirrups "
             f"{inputs.stirrup}; ends: {inputs.ends}; minimum reinforcement by "
-            f"{inputs.minimum_rule}.",
+            f"{inputs.minimum_rule}{waived}.",
             title="Choices",
         )
 
@@ -76,7 +78,7 @@ def _record_change(sheet: Sheet, pair: CodePair, clause: str, what: str) -> None
         f"Clause {clause}: {what}. Its text in {code} is not known here: {used}",
         title=f"Clause {clause} of {code}",
         clause=clause,
-        basis=f"from memory of an earlier edition; to be read in {code}",
+        basis=f"from memory of {EARLIER_EDITION}; to be read in {code}",
     )
 
 
@@ -108,6 +110,14 @@ def record_cover(sheet: Sheet, inputs: FloorBeamInputs) -> None:
         if inputs.slab:
             sheet.lookup("h_fire", cover.FIRE_SLAB, inputs.fire_rating, inputs.fire_aggregate)
             steps.check(cover.FIRE_SAFE_SLAB)
+
+
+def record_bar_cover(steps: Steps) -> None:
+    """Record inside the open part that other bars inside the stirrup are covered as well."""
+    cover_part = {n: steps.sheet.entry(f"{COVER}/{n}") for n in ("c_min", "r_cb", "r_ca", "c_b1")}
+    steps.bind(**cover_part)
+    steps.line(cover.COVER_REQUIRED_BAR)
+    steps.check(cover.DURABLE_BAR)
 
 
 def _width_for_fire(hours: float) -> Criterion:

@@ -37,6 +37,13 @@ def record_balanced(sheet: Sheet, shape: Shape) -> None:
     """Record the balanced state: neutral axis from strains, steel by equilibrium, moment."""
     steps = midspan(sheet, shape)
     with sheet.part(BALANCED, "Balanced condition"):
+        if any(part.key == COMPRESSION_BARS for part in sheet.parts):
+            sheet.note(
+                "compression-bars-left-out",
+                "The compression bars are not counted here; with them the balanced reinforcement "
+                "would be larger.",
+                title="Compression bars",
+            )
         balanced(steps, shape)
 
 
@@ -174,8 +181,8 @@ def record_doubly(sheet: Sheet, shape: Shape, pair: CodePair) -> None:
         doubly(steps, shape)
         sheet.note(
             "ties",
-            "Bars counted in compression are tied as 7.6.5 asks; the concrete they displace is "
-            "taken off.",
+            "Bars counted in compression must be tied as 7.6.5 asks, which is not checked here; "
+            "the concrete they displace is taken off.",
             title="Compression bars",
             clause="7.6.5",
             basis=FROM_MEMORY,

@@ -124,6 +124,7 @@ class FloorBeam:
 
     def _record_compression_bars(self, sheet: Sheet, layer: BarLayer) -> None:
         with sheet.part(COMPRESSION_BARS, "Compression bars, counted at midspan"):
+            sheet.note("bars-text", f"Compression bars at midspan: {layer}.", title="Bars")
             steps = Steps(sheet, {n: sheet.entry(f"{BARS}/{n}") for n in ("d_bs", "r_s")})
             n_c = sheet.given("n_c", str(layer.number), source="given")
             steps.bind(
@@ -134,6 +135,7 @@ class FloorBeam:
             )
             steps.lines(bar_clause.LEAST_CLEAR, bar_clause.CLEAR)
             steps.check(bar_clause.FITS)
+            basics.record_bar_cover(steps)
             steps.lines(bar_clause.COMPRESSION_AREA, bar_clause.COMPRESSION_DEPTH)
 
     def _plausible(self) -> list[BarLayers]:
@@ -308,6 +310,8 @@ def not_covered(inputs: FloorBeamInputs) -> list[Mapping[str, str]]:
         rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
     if inputs.ends != "free":
         rows.append({"check": "Crack control of the top bars at the ends", "clause": "10.6.1"})
+    if inputs.compression_bars is not None:
+        rows.append({"check": "Ties of the compression bars", "clause": "7.6.5"})
     return rows
 
 

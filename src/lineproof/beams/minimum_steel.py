@@ -38,3 +38,10 @@ def minimum_of(
         return
     steps.decide(test)
     steps.check(minimum.WAIVER)
+    steps.sheet.note(
+        "waiver-rests-on",
+        "The waiver rests on the factored moment above; where that moment is assumed, so is the "
+        "waiver, and the section cracks before it yields if the moment is larger.",
+        title="Waiver",
+        clause="10.5.1.3",
+    )

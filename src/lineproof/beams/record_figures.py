@@ -25,6 +25,9 @@ from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import compression_steel, strain
 
 _CURVE_POINTS = 35
+_NOT_YIELDING = (
+    "The bars do not all yield: the closed form of the resistance and a figure of it do not apply."
+)
 LEVER_ARM: Runs = (*symbol("d"), (" − ", "roman"), *symbol("a"), ("/2", "roman"))
 LEVER_ARM_FLANGE: Runs = (*symbol("d"), (" − ", "roman"), *symbol("h", "f"), ("/2", "roman"))
 LEVER_ARM_BARS: Runs = (*symbol("d"), (" − ", "roman"), *symbol("d", "", "′"))
@@ -114,6 +117,9 @@ def _skin_bars(cracks: dict[str, Entry], h: float, d: float) -> SkinBars | None:
 def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
     """Record strains and stresses at the resistance inside the open part."""
     bars, flexure = sheet.entries_of("bars"), sheet.entries_of("flexure")
+    if not all(flexure[key] for key in ("yield", "yield-upper") if key in flexure):
+        sheet.note("no-strains", _NOT_YIELDING, title="No figure of strains")
+        return
     c, d = flexure["c"].value, bars["d"].value
     block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
     a, eps_cu = block.value, sheet.find("eps_cu").value
@@ -140,10 +146,18 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
         StressState(d, c, a, eps_cu, steel_strain, in_unit(steel_strain, "", 3)),
         compression=forces,
         tension=Force(_force_label("T", "", tension), d),
-        rows=bottom_rows(bars, layers),
+        rows=[*bottom_rows(bars, layers), *_compression_row(sheet)],
         edge=sheet.entry("given/c_c").value + bars["d_bs"].value,
     )
     _record(sheet, "strains", figure, [flexure["c"], flexure["M_r"], bars["A_s"], bars["d"]])
+
+
+def _compression_row(sheet: Sheet) -> list[BarRow]:
+    counted = _entries(sheet, COMPRESSION_BARS)
+    if not counted:
+        return []
+    count, diameter = round(counted["n_c"].value), counted["d_b"].value
+    return [BarRow(count, diameter, counted["d_p"].value, "")]
 
 
 def _force_label(base: str, sub: str, force: float) -> Runs:

@@ -66,8 +66,9 @@ def record_second_path(sheet: Sheet, shape: Shape) -> None:
     flexure = sheet.entries_of("flexure")
     case = "two layers" if "A_s2" in steps.place else "one layer"
     if "C_s" in flexure:
-        case = "compression bars"
+        case = f"compression bars{', two layers' if case == 'two layers' else ''}"
         steps.bind(**{n: sheet.entry(f"{COMPRESSION_BARS}/{n}") for n in ("A_sp", "d_p")})
+        steps.bind(**{n: flexure[n] for n in ("a", "C_c", "C_s") if n in flexure})
     key = (zone_of(shape), case)
     with sheet.part(SECOND_PATH, "Second path: layers and strains"):
         record_proof(steps, key, flexure["M_r"])

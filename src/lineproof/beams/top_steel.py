@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from lineproof.beams.bars import BarLayer, bars_text
+from lineproof.beams.basics import record_bar_cover
 from lineproof.beams.flexure import record_yield, required, resistance
 from lineproof.beams.inputs import FloorBeamInputs, Shape
 from lineproof.beams.minimum_steel import minimum_of
@@ -103,6 +104,7 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) 
     steps.bind(**entries)
     steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
     steps.check(bars.FITS)
+    record_bar_cover(steps)
     steps.lines(_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
     return steps
 

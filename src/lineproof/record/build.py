@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from typing import Any
 
 from lineproof.errors import UserError
@@ -26,7 +26,9 @@ from lineproof.record.entry import (
 from lineproof.record.printing import Printer, utilisation
 
 SCHEMA = 1
-PASSES = 3
+EARLIER_EDITION = "an earlier edition"
+"""Stands in the basis of a rule whose text in the edition named is not known here."""
+MOST_PASSES = 8
 """Passes of printing: the later ones show each value as long as other lines need it."""
 _UNNUMBERED = (FIGURE, NOTE, TABLE)
 
@@ -44,10 +46,14 @@ def build(
 ) -> dict[str, Any]:
     """Return the record of a calculation as plain data, printed strings and digest included."""
     parts = list(parts)
-    builder = _Builder(notation)
-    for _ in range(PASSES):
-        builder = _Builder(notation, builder.wanted)
+    wanted: dict[int, int] = {}
+    for _ in range(MOST_PASSES):
+        builder = _Builder(notation, wanted)
         made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
+        needed = {key: max(n, wanted.get(key, 0)) for key, n in builder.wanted.items()}
+        if needed == wanted:
+            break
+        wanted = needed
     entries = [entry for part in made for entry in part["entries"]]
     confirm = _to_confirm(entries, project, codes)
     return {
@@ -252,33 +258,31 @@ def _to_confirm(
     entries: Iterable[Mapping[str, Any]], project: Mapping[str, Any], codes: Mapping[str, str]
 ) -> list[dict[str, Any]]:
     """Return what rests on memory, a row per clause, with the office's confirmation if there is."""
-    confirmed = _confirmed(project, codes)
-    rows: dict[tuple[str, str], dict[str, Any]] = {}
+    rows: dict[str, dict[str, Any]] = {}
     for entry in entries:
         if FROM_MEMORY in str(entry["basis"]):
-            clause = entry["clause"]
-            row = rows.setdefault(
-                (clause, entry["basis"]),
-                {
-                    "clause": clause,
-                    "what": "",
-                    "basis": entry["basis"],
-                    "confirmed": confirmed.get(clause, ""),
-                    "lines": [],
-                },
-            )
+            clause, basis = entry["clause"], str(entry["basis"])
+            empty = {"clause": clause, "what": "", "basis": basis, "confirmed": "", "lines": []}
+            row = rows.setdefault(clause, empty)
+            # What says more than "from memory" is the reason to look the clause up.
+            row["basis"] = max(row["basis"], basis, key=len)
             title = entry["title"][:1].upper() + entry["title"][1:]
             if title not in row["what"].split("; "):
                 row["what"] = f"{row['what']}; {title}" if row["what"] else title
             row["lines"].append(entry["id"])
+    for signed in _confirmations(project, codes):
+        found = rows.get(str(signed.get("clause")))
+        # A changed clause is confirmed by the value that stands in the office's copy, no less.
+        if found and (EARLIER_EDITION not in found["basis"] or "value" in signed):
+            found["confirmed"] = f"{signed.get('by', '')}, {signed.get('on', '')}"
     return list(rows.values())
 
 
-def _confirmed(project: Mapping[str, Any], codes: Mapping[str, str]) -> dict[str, str]:
-    """Return who confirmed which clause and when, for the editions of this calculation."""
-    found = {}
+def _confirmations(
+    project: Mapping[str, Any], codes: Mapping[str, str]
+) -> Iterator[Mapping[str, Any]]:
+    """Give the office's confirmations for the editions of this calculation."""
+    editions = {codes.get("concrete"), codes.get("building")}
     for row in project.get("confirmed", ()):
-        editions = {codes.get("concrete"), codes.get("building")}
-        if isinstance(row, Mapping) and row.get("edition") in (None, "", *editions):
-            found[str(row.get("clause"))] = f"{row.get('by', '')}, {row.get('on', '')}"
-    return found
+        if isinstance(row, Mapping) and row.get("edition") in editions:
+            yield row

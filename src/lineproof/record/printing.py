@@ -69,13 +69,13 @@ class Printer:
         self.used: dict[int, int] = {}
 
     def _note_use(self, entry: Entry, digits: int) -> None:
-        if entry.kind == LINE:
+        if entry.kind in (LINE, FOUND, GIVEN):
             self.used[id(entry)] = max(digits, self.used.get(id(entry), 0))
 
     def printed(self, entry: Entry) -> dict[str, Any]:
         """Return the printed strings of a given, lookup, line or found value."""
         if entry.kind == GIVEN:
-            made = _given(entry)
+            made = _given(entry, self._wanted.get(id(entry), 0))
             self._digits[id(entry)] = digits_in(made["result"])
         elif entry.kind == LOOKUP:
             made = {"result": entry.source.typed.number, "unit": entry.source.unit}
@@ -188,7 +188,8 @@ class Printer:
         }
 
     def _found(self, entry: Entry) -> dict[str, Any]:
-        digits = max(4, start_digits(entry.value, entry.unit))
+        least = max(4, start_digits(entry.value, entry.unit))
+        digits = max(least, self._wanted.get(id(entry), 0))
         self._digits[id(entry)] = digits
         texts = {
             name: _argument_text(arg, argument, argument.digits, "N-mm")
@@ -239,14 +240,13 @@ def _by_powers_of_ten(unit: str, target: str) -> bool:
     return factor(unit, target).normalize().as_tuple().digits == (1,)
 
 
-def _given(entry: Entry) -> dict[str, Any]:
+def _given(entry: Entry, wanted: int) -> dict[str, Any]:
     typed = entry.source.typed
     if typed.unit not in NOT_METRIC:
         return {"result": typed.number, "unit": typed.unit}
     digits = START_DIGITS
     exact = exact_decimal(entry)
-    if exact is not None:
-        digits = max(digits, len(exact.as_tuple().digits))
+    digits = max(digits, wanted if exact is None else len(exact.as_tuple().digits))
     return {
         "typed": typed.number,
         "typed_unit": typed.unit,

@@ -105,14 +105,14 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
 
 
 def _unsigned(path: Path, facts: dict[str, Any]) -> list[str]:
-    """Return a fault per confirmation that does not say which clause, who and when."""
+    """Return a fault per confirmation that does not say which clause of what, who and when."""
     rows = facts.get("confirmed", [])
     return [
-        f"{path}: confirmed: row {number} has no {key!r}; write clause, by and on, such as "
-        "clause = '10.1.7', by = 'A.B.', on = 2026-11-20"
+        f"{path}: confirmed: row {number} has no {key!r}; write clause, edition, by and on, such "
+        "as clause = '10.1.7', edition = 'CSA A23.3-14', by = 'A.B.', on = 2026-11-20"
         for number, row in enumerate(rows if isinstance(rows, list) else [], 1)
         if isinstance(row, dict)
-        for key in ("clause", "by", "on")
+        for key in ("clause", "edition", "by", "on")
         if not str(row.get(key, "")).strip()
     ]
 

@@ -75,7 +75,7 @@ FIRE_SLAB = LookupTable(
 
 COVER_TO_BARS = _formula(
     "c_b1 = c_c + d_bs",
-    clause="A23.1 6.6.6",
+    clause="geometry",
     title="Clear cover to the principal bars",
     basis=MECHANICS,
 )

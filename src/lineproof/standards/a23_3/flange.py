@@ -69,13 +69,13 @@ CENTROID_TOP = _formula(
 )
 CRACKING_BOTTOM = _formula(
     "M_cr = f_r*I_g/y_b",
-    clause="9.8.2.3",
+    clause="8.6.4",
     title="Cracking moment, bottom in tension",
     basis=MECHANICS,
 )
 CRACKING_TOP = _formula(
     "M_crn = f_r*I_g/y_t",
-    clause="9.8.2.3",
+    clause="8.6.4",
     title="Cracking moment, top in tension",
     basis=MECHANICS,
 )

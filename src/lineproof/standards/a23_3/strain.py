@@ -165,6 +165,7 @@ CASES = {
     "one layer": ("A_s", "d"),
     "two layers": ("A_s1", "d_1", "A_s2", "d_2"),
     "compression bars": ("A_s", "d", "A_sp", "d_p"),
+    "compression bars, two layers": ("A_s1", "d_1", "A_s2", "d_2", "A_sp", "d_p"),
 }
 """Arrangements of bars and the symbols of their areas and depths."""
 _ANY_DEPTH = 1e9

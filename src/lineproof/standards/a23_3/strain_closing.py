@@ -27,7 +27,12 @@ _BY_STRAINS = {
     "two layers": "phi_s*(A_s1*min(f_y, E_s*eps_cu*(d_1 - c_l)/c_l)"
     " + A_s2*min(f_y, E_s*eps_cu*(d_2 - c_l)/c_l))",
 }
-_INNERMOST = {"one layer": "d", "two layers": "d_2", "compression bars": "d"}
+_INNERMOST = {
+    "one layer": "d",
+    "two layers": "d_2",
+    "compression bars": "d",
+    "compression bars, two layers": "d_2",
+}
 LAYERED = tuple(_BY_STRAINS)
 """Cases whose axis is found a second time; with compression bars it is found in the first path."""
 _BALANCED = "Compression and tension balance at this depth."
@@ -63,6 +68,20 @@ MOMENTS = {
         key="moment-of-block",
     )
     for in_flange, arm in _BLOCK_MOMENT.items()
+}
+MOMENTS_DOUBLY = {
+    in_flange: _criterion(
+        f"abs(M_l - ({concrete} + C_s*(d - d_p))) <= 0.001*M_l",
+        unit="kN.m",
+        clause="10.1.1",
+        title="Moment of the block and the compression bars about the tension bars",
+        yes="Block and compression bars give the same moment about the tension bars.",
+        key="moment-of-block",
+    )
+    for in_flange, concrete in {
+        True: "C_c*(d - a/2)",
+        False: "alpha_1*phi_c*f_c*((b - b_w)*h_f*(d - h_f/2) + b_w*a*(d - a/2))",
+    }.items()
 }
 MOMENT_BOUND = _criterion(
     "M_l <= phi_s*A_s*f_y*d",
@@ -117,8 +136,11 @@ def closings(key: strain.Key, values: Mapping[str, float]) -> tuple[Criterion, C
     axis = _value(strain.AXIS[key], values)
     in_flange = zone == "rectangle" or values["beta_1"] * axis <= values["h_f"]
     yields = _yields(case, axis, values)
-    by_hand = case == "one layer" or (case == "two layers" and yields)
-    moment = MOMENTS[in_flange] if by_hand else MOMENT_BOUND
+    moment = MOMENT_BOUND
+    if case == "one layer" or (case == "two layers" and yields):
+        moment = MOMENTS[in_flange]
+    elif case not in LAYERED and yields:
+        moment = MOMENTS_DOUBLY[in_flange]
     return AXES.get((case, in_flange, yields), MOMENT_BOUND), moment
 
 
@@ -127,7 +149,7 @@ def parabola_closings(key: strain.Key, values: Mapping[str, float]) -> tuple[Cri
     zone, case = key
     axis = _value(strain.AXIS_PARABOLA[key], values, strain.PARABOLA_SETTINGS)
     in_flange = zone == "rectangle" or axis <= values["h_f"]
-    if in_flange and case != "compression bars" and _yields(case, axis, values):
+    if in_flange and case in LAYERED and _yields(case, axis, values):
         return AXIS_PARABOLA, MOMENT_PARABOLA
     return AXIS_BOUND_PARABOLA, MOMENT_BOUND_PARABOLA
 
@@ -146,6 +168,7 @@ def _yields(case: str, axis: float, values: Mapping[str, float]) -> bool:
 CRITERIA = (
     *AXES.values(),
     *MOMENTS.values(),
+    *MOMENTS_DOUBLY.values(),
     MOMENT_BOUND,
     AXIS_PARABOLA,
     MOMENT_PARABOLA,
