@@ -95,7 +95,7 @@ PROJECT: dict[str, Any] = {
         {"letter": "B", "date": "2026-11-20", "description": "Superimposed load raised"},
     ],
     "criteria": {"exposure": "N, interior", "fire_resistance": "2 h", "use": "assembly, 4.8 kPa"},
-    "confirmed": [{"clause": "8.4.3", "by": "A.V.", "on": "2026-11-18"}],
+    "confirmed": [{"clause": "8.4.3", "edition": "CSA A23.3-14", "by": "A.V.", "on": "2026-11-18"}],
 }
 
 

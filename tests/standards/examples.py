@@ -114,6 +114,16 @@ EXAMPLES: dict[str, tuple[Given, Given]] = {
         {**IN_WEB, "c_l": 268.85, "M_l": 1220.4},
         {**IN_WEB, "c_l": 268.85, "M_l": 1223},
     ),
+    # check 5c: 697.95*(500 - 128.23/2) + 321.857*(500 - 62) = 304.2 + 141.0 = 445.2 kN.m
+    "strain_closing.moment-of-block 10": (
+        {"C_c": 697.95, "a": 128.23, "C_s": 321.857, "d": 500, "d_p": 62, "M_l": 445.2},
+        {"C_c": 697.95, "a": 128.23, "C_s": 321.857, "d": 500, "d_p": 62, "M_l": 446},
+    ),
+    # check 5b with 100 kN in compression bars: 1220.4 + 100*(0.600 - 0.060) = 1274.4 kN.m
+    "strain_closing.moment-of-block 11": (
+        {**IN_WEB, "a": 237.3, "C_s": 100, "d_p": 60, "M_l": 1274.4},
+        {**IN_WEB, "a": 237.3, "C_s": 100, "d_p": 60, "M_l": 1277},
+    ),
     # 0.9*0.65*35*0.8095*350 = 5801.1 N/mm; 680000/5801.1 = 117.22; at 118: 684.5 kN, 0.7 %
     "strain_closing.AXIS_PARABOLA": ({**RECTANGLE, "c_p": 117.22}, {**RECTANGLE, "c_p": 118}),
     # 680 kN*(535 - 0.416*117.22) mm = 680*486.24 = 330.64 kN.m; 0.86 kN.m is 0.26 %
