@@ -456,7 +456,7 @@ def test_the_project_file(tmp_path: Path) -> None:
         (b"[criteria]\nx = " + b"[" * 5000, "not valid TOML"),
         (b"[criteria]\nx = [[[1]]]", "criteria.x.1 is nested too deeply"),
         (
-            b"[codes]\npair = 'x'\n[[confirmed]]\nclause = '10.1.7'\nedition = 'X'\non = 2026-11-20",
+            b"[codes]\npair = 'x'\n[[confirmed]]\nclause = '10.1'\nedition = 'X'\non = 2026-11-20",
             "confirmed: row 1 has no 'by'; write clause, edition, by and on",
         ),
     ],
