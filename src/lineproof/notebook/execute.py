@@ -71,10 +71,10 @@ def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progre
     with log.open("wb") as stderr:
         try:
             client.execute(env=os.environ | {"IPYTHONDIR": str(scratch)}, stderr=stderr)
-        except AssertionError:
-            if client.km is not None:
+        except Exception:
+            # A signal makes the client end its kernel, which it then misses in one way or another.
+            if getattr(client, "_async_cleanup_kernel_future", None) is None:
                 raise
-            # Stopped by a signal: the client has ended the kernel and misses it afterwards.
             raise KeyboardInterrupt from None
 
 
