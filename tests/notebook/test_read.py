@@ -251,3 +251,9 @@ def test_a_missing_file_is_named(tmp_path: Path) -> None:
 def test_a_stored_notebook_is_read_from_its_file(beam_file: Path, beam: Notebook) -> None:
     assert read_calc(beam_file).record.data == read(beam).record.data
     assert json.loads(beam_file.read_text(encoding="utf-8")) == beam
+
+
+def test_a_record_without_a_line_is_refused(beam: Notebook) -> None:
+    record_in(beam)["parts"] = []
+    beam["cells"][GIVENS]["outputs"] = beam["cells"][FLEXURE]["outputs"] = []
+    assert "its record holds no line; record something before sheet.close()" in faults_of(beam)

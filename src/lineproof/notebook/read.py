@@ -48,6 +48,8 @@ def calc_of(data: Mapping[str, Any], name: str, *, fresh: bool = True) -> Calc:
     for cell in cells:
         _check_errors(cell, name, faults)
     record = record_of(cells, name, faults)
+    if not record.entries:
+        faults.add(f"{name}: its record holds no line; record something before sheet.close()")
     parts = {part["key"]: part for part in record.parts}
     anchors = _anchors(cells, name, faults)
     _check_anchors(anchors, parts, name, faults)
