@@ -290,3 +290,19 @@ def test_undoing_leaves_what_another_issue_has_put_there(tmp_path: Path) -> None
     with pytest.raises(UserError, match="nothing has been changed"):
         write_all(files)
     assert [path.name for path in (tmp_path / "new").iterdir()] == ["other.pdf"]
+
+
+def test_a_record_changed_by_hand_gives_itself_away(package: Path, capsys: Capture) -> None:
+    """One digit of M_r in the page: the lines are printed, and the one that is wrong is named."""
+    page = (package / "beam.html").read_text(encoding="utf-8")
+    found = json.loads((package / "beam.json").read_text(encoding="utf-8"))
+    values = {e["id"]: e["value"] for p in found["parts"] for e in p["entries"] if "value" in e}
+    was = json.dumps(values["flexure/M_r"])
+    altered = package / "altered.html"
+    altered.write_text(page.replace(was, was.replace("456", "465")), encoding="utf-8")
+
+    assert was.startswith("456")
+    assert main(["lines", str(altered)]) == 1
+    assert "B1: flexure/M_r: value stored 465" in capsys.readouterr().err
+    assert main(["lines", str(package / "beam.html")]) == 0
+    assert capsys.readouterr().err == ""

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import copy
 import hashlib
+import json
 import os
 import subprocess
 import sys
@@ -151,10 +152,16 @@ def test_a_digest_is_the_hash_of_the_texts(sample: Record) -> None:
         == digest_of("given", "f_c", "32 MPa", "MPa")
     )
     assert sample.entries["flexure/E_c"]["digest"] == by_hand(
-        "line", "E_c", "E_c = 4500*sqrt(f_c)", "MPa", "8.6.2.3", given_f_c
+        "line", "E_c", "E_c = 4500*sqrt(f_c)", "MPa", "8.6.2.3", f"f_c={given_f_c}"
     )
     pieces = sorted(f"{i}:{e['digest']}" for i, e in sample.entries.items())
     assert sample.digest == by_hand("B7", "NBC 2015 + A23.3-14", *pieces)
+
+
+def test_a_record_saved_with_its_keys_sorted_still_follows(sample: Record) -> None:
+    # Jupyter sorts the keys of all it saves.
+    saved = json.loads(json.dumps(sample.data, sort_keys=True))
+    assert recompute(Record.from_data(saved)) == []
 
 
 @pytest.mark.parametrize(

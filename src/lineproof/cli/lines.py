@@ -16,19 +16,39 @@ from lineproof.record.entry import CRITERIA, VALUES
 from lineproof.typeset import printable
 
 LARGEST_FILE = 64_000_000
+MOST_NAMED = 20
 _COMMON = ("id", "label", "kind", "symbol", "title", "clause", "basis")
 _OWN = ("typed", "source", "table", "row", "numbers", "procedure", "settings", "closing", "holds",
         "left", "right", "utilisation", "conclusion", "exception", "printed", "digest")  # fmt: skip
 
 
 def run(options: argparse.Namespace) -> int:
-    """Print the lines of a file."""
+    """Print the lines of a file; returns 1 where one does not follow from what it rests on."""
     records = read_records(options.file)
     if options.json:
         sys.stdout.write(json.dumps(as_json(records), indent=1, allow_nan=False) + "\n")
     else:
         sys.stdout.writelines(f"{line}\n" for line in as_table(records))
-    return 0
+    altered = [
+        f"{record.calc_id}: {found}" for record in records for found in altered_lines(record)
+    ]
+    for sentence in altered[:MOST_NAMED]:
+        sys.stderr.write(f"{printable(sentence)}\n")
+    if len(altered) > MOST_NAMED:
+        sys.stderr.write(f"and {len(altered) - MOST_NAMED} more\n")
+    return 1 if altered else 0
+
+
+def altered_lines(record: Record) -> list[str]:
+    """Return a sentence per line that its own formula and givens do not give.
+
+    A record says what it was computed from, so one that was changed by hand gives itself away.
+    """
+    # The catalogue registers the procedures by which found values are found again.
+    import lineproof.standards.catalogue  # noqa: F401, PLC0415 - 0.1 s, to recompute only
+    from lineproof.record import recompute  # noqa: PLC0415 - with it
+
+    return [str(difference) for difference in recompute(record)]
 
 
 def read_records(path: Path) -> list[Record]:

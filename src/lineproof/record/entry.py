@@ -22,6 +22,14 @@ def digest_of(*pieces: str) -> str:
     return hashlib.sha256("\x1f".join(pieces).encode()).hexdigest()[:DIGEST_LENGTH]
 
 
+def rested_on(arguments: Iterable[tuple[str, str]]) -> list[str]:
+    """Return the pieces of a digest that arguments give, by name: (name, digest) pairs.
+
+    Sorted, since a record that was saved by Jupyter comes back with its keys sorted.
+    """
+    return sorted(f"{name}={digest}" for name, digest in arguments)
+
+
 class Part:
     """A titled part of a calculation and the entries made in it, by symbol, in order."""
 
@@ -86,9 +94,17 @@ class Entry:
                 waiting.extend(missing)
             else:
                 pieces = entry._pieces()  # noqa: SLF001 - another entry
-                entry.digest_ = digest_of(*pieces, *[arg.digest_ for arg in entry.args])
+                names = entry._argument_names()  # noqa: SLF001 - another entry
+                on = zip(names, (arg.digest_ for arg in entry.args), strict=True)
+                entry.digest_ = digest_of(*pieces, *rested_on(on))
                 waiting.pop()
         return self.digest_
+
+    def _argument_names(self) -> Iterable[str]:
+        """Return what the arguments are called; what only shows calls them nothing."""
+        if self.kind in (LINE, DECISION, CHECK):
+            return tuple(self.source.names)
+        return tuple(self.source.procedure.names) if self.kind == FOUND else [""] * len(self.args)
 
     def _pieces(self) -> Iterable[str]:
         if self.kind in (LINE, DECISION, CHECK):

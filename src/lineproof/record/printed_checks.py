@@ -21,6 +21,7 @@ from lineproof.record.entry import (
     LOOKUP,
     NOTE,
     digest_of,
+    rested_on,
 )
 
 Data = Mapping[str, Any]
@@ -99,7 +100,10 @@ def digests(entries: Mapping[str, Data]) -> dict[str, str]:
     """Return the digest of each entry, hashed again from the record's own texts."""
     made: dict[str, str] = {}
     for entry_id, entry in entries.items():
-        on = [made[target] for target in entry.get("args", {}).values()]
+        named = entry["kind"] in (LINE, FOUND, *CRITERIA)
+        on = rested_on(
+            (name if named else "", made[target]) for name, target in entry.get("args", {}).items()
+        )
         made[entry_id] = digest_of(entry["kind"], entry["symbol"], *_pieces(entry), *on)
     return made
 
