@@ -111,6 +111,19 @@ FLEXURE = (
         CHECK_5 + "b",
     ),
 )
+STATE = (
+    W(
+        "flexure.WEB_FORCE",
+        {**BASE, "b_w": 300, "a_w": 200},
+        "18.143125*300*200/1e3 = 1088.6",
+    ),
+    W(
+        "flexure.STEEL_STRAIN",
+        {"eps_cu": 0.0035, "beta_1": 0.8825, "d": 535, "a": 107.085},
+        # c = 107.085/0.8825 = 121.343; 0.0035*(535 - 121.343)/121.343 = 0.011931
+        "0.0035*(0.8825*535 - 107.085)/107.085 = 0.0035*365.05/107.085 = 0.011931",
+    ),
+)
 # Doubly reinforced, check no. 5c: b 300, d 500, d' 62, A_s 3000, A'_s 1000, c 145.3 (counted).
 DOUBLE = (
     W(
@@ -249,4 +262,4 @@ CAPACITY = (
     W("capacity.WHOLE", {"A_sb": 9600}, "1.0*9600 = 9600"),
     W("capacity.RATIO", {"A_s": 3000, "A_sb": 9600}, "3000/9600 = 0.3125"),
 )
-WORKED_FLEXURE = (*FLEXURE, *DOUBLE, *MINIMUM, *CRACKS, *CAPACITY)
+WORKED_FLEXURE = (*FLEXURE, *STATE, *DOUBLE, *MINIMUM, *CRACKS, *CAPACITY)

@@ -211,3 +211,22 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
         return steps.line(double.M_R_TEE)
     steps.line(double.CONCRETE_FORCE)
     return steps.line(double.M_R)
+
+
+def record_state(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
+    """Record inside the open part strain and forces at the resistance; return them by symbol.
+
+    For bars that all yield.
+    """
+    flexure = sheet.entries_of(FLEXURE)
+    steps = midspan(sheet, shape)
+    steps.bind(**{n: flexure[n] for n in ("a", "C_f") if n in flexure})
+    forces: dict[str, Entry] = {n: flexure[n] for n in ("C_s", "C_f") if n in flexure}
+    if "C_f" in flexure:
+        block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
+        steps.bind(a_w=block, a=block)
+        forces["C_w"] = steps.line(clause.WEB_FORCE)
+    else:
+        forces["C_c"] = flexure["C_c"] if "C_c" in flexure else steps.line(double.CONCRETE_FORCE)
+    forces["T_s"] = steps.line(double.TENSION)
+    return forces | {"eps_s": steps.line(clause.STEEL_STRAIN)}

@@ -17,12 +17,13 @@ from lineproof.beams.figures import (
     strain_stress_figure,
     stress_strain_figure,
 )
+from lineproof.beams.flexure import record_state
 from lineproof.beams.inputs import Shape
 from lineproof.drawing import Dash, Figure, Runs, symbol, to_json
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import compression_steel, strain
+from lineproof.standards.a23_3 import strain
 
 _CURVE_POINTS = 35
 _NOT_YIELDING = (
@@ -120,36 +121,29 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
     if not all(flexure[key] for key in ("yield", "yield-upper") if key in flexure):
         sheet.note("no-strains", _NOT_YIELDING, title="No figure of strains")
         return
-    c, d = flexure["c"].value, bars["d"].value
+    state = record_state(sheet, shape)
     block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
-    a, eps_cu = block.value, sheet.find("eps_cu").value
-    tension = compression_steel.TENSION.function(
-        sheet.find("phi_s").value, bars["A_s"].value, sheet.find("f_y").value
-    )
-    steel_strain = eps_cu * (d - c) / c
-    h_f = sheet.find("h_f").value if shape != "rectangular" else 0.0
-    forces, concrete = [], tension
-    if "C_s" in flexure:
-        C_s, d_p = flexure["C_s"].value, sheet.entry("compression-bars/d_p").value
-        forces, concrete = [Force(_force_label("C", "s", C_s), d_p, LEVER_ARM_BARS)], tension - C_s
-    if "C_f" in flexure:
-        C_f = flexure["C_f"].value
-        forces += [
-            Force(_force_label("C", "f", C_f), h_f / 2, LEVER_ARM_FLANGE),
-            Force(_force_label("C", "w", concrete - C_f), a / 2, LEVER_ARM),
-        ]
-    else:
-        sub = "c" if forces else ""
-        forces.append(Force(_force_label("C", sub, concrete), a / 2, LEVER_ARM))
+    c, d, a, eps_s = flexure["c"].value, bars["d"].value, block.value, state["eps_s"].value
+    forces = []
+    if "C_s" in state:
+        d_p = sheet.entry(f"{COMPRESSION_BARS}/d_p").value
+        forces.append(Force(_force_label("C", "s", state["C_s"]), d_p, LEVER_ARM_BARS))
+    if "C_f" in state:
+        h_f = sheet.find("h_f").value
+        forces.append(Force(_force_label("C", "f", state["C_f"]), h_f / 2, LEVER_ARM_FLANGE))
+    web_or_all = "w" if "C_w" in state else "c"
+    whole = state[f"C_{web_or_all}"]
+    forces.append(Force(_force_label("C", web_or_all, whole), a / 2, LEVER_ARM))
     figure = strain_stress_figure(
         section_shape(sheet, shape),
-        StressState(d, c, a, eps_cu, steel_strain, in_unit(steel_strain, "", 3)),
+        StressState(d, c, a, sheet.find("eps_cu").value, eps_s, in_unit(eps_s, "", 3)),
         compression=forces,
-        tension=Force(_force_label("T", "", tension), d),
+        tension=Force(_force_label("T", "s", state["T_s"]), d),
         rows=[*bottom_rows(bars, layers), *_compression_row(sheet)],
         edge=sheet.entry("given/c_c").value + bars["d_bs"].value,
     )
-    _record(sheet, "strains", figure, [flexure["c"], flexure["M_r"], bars["A_s"], bars["d"]])
+    rests_on = [flexure["c"], block, flexure["M_r"], bars["A_s"], bars["d"], *state.values()]
+    _record(sheet, "strains", figure, rests_on)
 
 
 def _compression_row(sheet: Sheet) -> list[BarRow]:
@@ -160,8 +154,8 @@ def _compression_row(sheet: Sheet) -> list[BarRow]:
     return [BarRow(count, diameter, counted["d_p"].value, "")]
 
 
-def _force_label(base: str, sub: str, force: float) -> Runs:
-    return (*symbol(base, sub), (f" = {in_unit(force, 'kN', 3)} kN", "roman"))
+def _force_label(base: str, sub: str, force: Entry) -> Runs:
+    return (*symbol(base, sub), (f" = {in_unit(force.value, 'kN', 3)} kN", "roman"))
 
 
 def record_curve_figure(sheet: Sheet) -> None:

@@ -38,6 +38,19 @@ BLOCK_IN_WEB = _formula(
     title="Depth of the stress block, in the web",
     basis=FROM_MEMORY,
 )
+WEB_FORCE = _formula(
+    "C_w = alpha_1*phi_c*f_c*b_w*a_w",
+    clause="10.1.7",
+    title="Compression in the web",
+    basis=FROM_MEMORY,
+)
+# With c = a/beta_1 put in: a rounded c would ask for two digits more, here and where it stands.
+STEEL_STRAIN = _formula(
+    "eps_s = eps_cu*(beta_1*d - a)/a",
+    clause="10.1.2",
+    title="Strain at the centroid of the tension bars",
+    basis=MECHANICS,
+)
 NEUTRAL_AXIS = _formula(
     "c = a/beta_1", clause="10.1.7", title="Depth of the neutral axis", basis=FROM_MEMORY
 )
@@ -151,6 +164,8 @@ FORMULAS = (
     BLOCK_RECTANGULAR,
     FLANGE_FORCE,
     BLOCK_IN_WEB,
+    WEB_FORCE,
+    STEEL_STRAIN,
     NEUTRAL_AXIS,
     NEUTRAL_AXIS_IN_WEB,
     M_R_RECTANGULAR,
