@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from pathlib import Path
 from typing import Any
 
 import nbformat
@@ -32,14 +31,14 @@ def test_package_pdf_warm(benchmark: Callable[..., Any]) -> None:
 
 @pytest.mark.benchmark(group="demo package to PDF")
 def test_browser_pdf(
-    benchmark: Callable[..., Any], chromium: Path, monkeypatch: pytest.MonkeyPatch
+    benchmark: Callable[..., Any], chromium: str | None, monkeypatch: pytest.MonkeyPatch
 ) -> None:
     """The same notebook through nbconvert's own browser PDF."""
     launch = playwright.async_api.BrowserType.launch
 
     async def launch_installed(self: Any, **options: Any) -> Any:
         options["args"] = [*options.get("args", ()), "--no-sandbox", "--disable-gpu"]
-        return await launch(self, executable_path=str(chromium), **options)
+        return await launch(self, executable_path=chromium, **options)
 
     monkeypatch.setattr(playwright.async_api.BrowserType, "launch", launch_installed)
     notebook = nbformat.read(DEMO, as_version=4)

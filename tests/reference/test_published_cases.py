@@ -217,7 +217,10 @@ def test_d1_cracking_moment_of_tee() -> None:
 def test_e3_balanced_ratio(f_c: float, rho_b: float) -> None:
     """A23.3, 10.5.2: c_b/d = 700/1100 = 0.636; rho_b in %: own evaluation, not a printed number.
 
-    f'c 30: 0.805 x 0.895 x 0.65 x 30/(0.85 x 400) x 7/11 = 0.0263.
+    f'c 30: 0.805 x 0.895 x 0.65 x 30/(0.85 x 400) x 7/11 = 0.02630;
+    f'c 25: 0.8125 x 0.9075 x 0.65 x 25/(0.85 x 400) x 7/11 = 0.02243;
+    f'c 35: 0.7975 x 0.8825 x 0.65 x 35/(0.85 x 400) x 7/11 = 0.02997;
+    f'c 40: 0.79 x 0.87 x 0.65 x 40/(0.85 x 400) x 7/11 = 0.03345.
     """
     x: dict[str, float] = {
         "f_c": f_c,

@@ -5,9 +5,11 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from lineproof.beams.figures import MomentLevel
-from lineproof.beams.flexure import midspan, resistance
+from lineproof.beams.flexure import block_of, midspan, resistance
 from lineproof.beams.inputs import Shape
 from lineproof.beams.record_figures import record_capacity_figure
+from lineproof.beams.second_path import record_proof
+from lineproof.beams.section import zone_of
 from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
@@ -48,7 +50,7 @@ def _call(formula: Formula, values: Mapping[str, float]) -> float:
 
 
 def record_shares(sheet: Sheet, shape: Shape) -> list[tuple[Entry, Entry, Entry]]:
-    """Record the resistance at 25, 50, 75 and 100 % of the balanced steel, a part for each.
+    """Record the resistance at 25, 50, 75 and 100 % of the balanced steel, proved, a part for each.
 
     Return (area, depth of the block, resistance) of each.
     """
@@ -58,7 +60,8 @@ def record_shares(sheet: Sheet, shape: Shape) -> list[tuple[Entry, Entry, Entry]
         with sheet.part(f"capacity-{share}", f"Resistance with {share} % of the balanced steel"):
             A_s = steps.line(area)
             M_r = resistance(steps, shape)
-            made.append((A_s, steps.place.get("a_w", steps.place["a"]), M_r))
+            made.append((A_s, block_of(steps.place), M_r))
+            record_proof(steps, (zone_of(shape), "one layer"), M_r)
     return made
 
 

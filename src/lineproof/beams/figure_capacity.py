@@ -43,7 +43,6 @@ def capacity_figure(
     levels: Sequence[MomentLevel],
     *,
     caption: str = "Resistance against amount of steel",
-    alt: str = "",
 ) -> Figure:
     """Draw M_r in kN.m against A_s over its balanced value.
 
@@ -70,7 +69,7 @@ def capacity_figure(
         + "".join(f"; {each.name} {each.moment:.0f} kN·m" for each in levels)
         + "."
     )
-    return Figure(PAGE_WIDTH, 72.0, 1.0, (0.0, 0.0), tuple(shapes), alt or text, caption)
+    return Figure(PAGE_WIDTH, 72.0, 1.0, (0.0, 0.0), tuple(shapes), text, caption)
 
 
 _RESISTANCE = symbol("M", "r")
@@ -184,7 +183,6 @@ def stress_strain_figure(
     peak: Point,
     peak_label: Runs,
     caption: str = "Concrete in compression",
-    alt: str = "",
 ) -> Figure:
     """Draw concrete stress in MPa against strain in thousandths, with its peak marked."""
     x_ticks = nice_ticks(0.0, points[-1][0], 4)
@@ -199,5 +197,5 @@ def stress_strain_figure(
         *drop_lines(axes, peak),
         Text((x, y + 3.4), peak_label, "text"),
     ]
-    text = alt or f"Stress rises to {peak[1]:.1f} MPa at a strain of {peak[0]:g} thousandths."
+    text = f"Stress rises to {peak[1]:.1f} MPa at a strain of {peak[0]:g} thousandths."
     return Figure(92.0, 54.0, 1.0, (0.0, 0.0), tuple(shapes), text, caption)

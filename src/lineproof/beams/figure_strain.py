@@ -74,9 +74,6 @@ def strain_stress_figure(
     tension: Force,
     rows: Sequence[BarRow] = (),
     edge: float = 50.0,
-    stress_label: Runs = STRESS_LABEL,
-    caption: str = "Strains and stresses at the resistance",
-    alt: str = "",
 ) -> Figure:
     """Draw section with compression zone, strain diagram and stress block.
 
@@ -92,7 +89,7 @@ def strain_stress_figure(
     shapes.extend(bars(shape, rows, edge))
     shapes.extend(_levels(shape, shown, state, stress_x))
     shapes.extend(_strains(shape, state, strain_x, unit))
-    shapes.extend(_stresses(shape, state, stress_x, unit, stress_label))
+    shapes.extend(_stresses(shape, state, stress_x, unit))
     shapes.extend(_forces(shape, [*compression, tension], stress_x, unit, state.d))
     left = 4.0 + shown.left * shown.scale
     width = left + stress_x * shown.scale + BLOCK_WIDTH + _arms_start((*compression, tension))
@@ -104,8 +101,8 @@ def strain_stress_figure(
         shown.scale,
         (round(left, 3), 10.5),
         tuple(shapes),
-        alt or _alt(state),
-        caption,
+        _alt(state),
+        "Strains and stresses at the resistance",
     )
 
 
@@ -161,16 +158,14 @@ def _strain(name: Runs, value: str) -> Runs:
     return (*name, (f" = {value}", "roman"))
 
 
-def _stresses(
-    shape: SectionShape, state: StressState, x: float, unit: float, label: Runs
-) -> list[Shape]:
+def _stresses(shape: SectionShape, state: StressState, x: float, unit: float) -> list[Shape]:
     top, low, right = shape.h, shape.h - state.a, x + BLOCK_WIDTH * unit
     block = ((x, low), (right, low), (right, top), (x, top))
     return [
         Polyline(block, "curve", MEDIUM, closed=True, fill="hatch"),
         Line((x, low), (x, shape.h - state.d), "curve", LIGHT),
         Dimension((x, top), (x, low), "vertical", -6.0, symbol("a")),
-        Text(((x + right) / 2, top + 3.2 * unit), label),
+        Text(((x + right) / 2, top + 3.2 * unit), STRESS_LABEL),
     ]
 
 

@@ -5,9 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
-from lineproof.beams.bottom_bars import COMPRESSION_BARS
+from lineproof.beams.bottom_bars import BARS, COMPRESSION_BARS
 from lineproof.beams.inputs import Shape
-from lineproof.beams.section import compression_zone
+from lineproof.beams.section import compression_zone, zone_of
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.formula import FROM_MEMORY
@@ -26,9 +26,9 @@ YIELD_CLAUSE = "10.5.2"
 _LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
 
 
-def midspan(sheet: Sheet, shape: Shape, bars: str = "bars") -> Steps:
-    """Return the steps at midspan: the bars of that part, compression at the top."""
-    entries = sheet.entries_of(bars)
+def midspan(sheet: Sheet, shape: Shape) -> Steps:
+    """Return the steps at midspan: the bottom bars, compression at the top."""
+    entries = sheet.entries_of(BARS)
     place = compression_zone(sheet, shape) | {n: entries[n] for n in _LAYERS if n in entries}
     return Steps(sheet, place)
 
@@ -47,8 +47,8 @@ def record_balanced(sheet: Sheet, shape: Shape) -> None:
         balanced(steps, shape)
 
 
-def balanced(steps: Steps, shape: Shape) -> bool:
-    """Record the balanced state inside the open part; tell whether the flange holds the block."""
+def balanced(steps: Steps, shape: Shape) -> None:
+    """Record the balanced state inside the open part, the block in the flange or in the web."""
     steps.lines(stress_block.C_BALANCED, stress_block.A_BALANCED)
     in_flange = shape == "rectangular" or bool(steps.decide(stress_block.BALANCED_IN_FLANGE))
     if in_flange:
@@ -63,7 +63,6 @@ def balanced(steps: Steps, shape: Shape) -> bool:
             stress_block.A_S_BALANCED,
             stress_block.M_R_BALANCED_TEE,
         )
-    return in_flange
 
 
 def record_required(sheet: Sheet, shape: Shape) -> None:
@@ -200,7 +199,7 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
         )
     in_flange = shape == "rectangular" or bool(steps.decide(double.STAYS_IN_FLANGE))
     closing = double.CLOSES if in_flange else double.CLOSES_TEE
-    zone = "rectangle" if shape == "rectangular" else "tee"
+    zone = zone_of(shape)
     steps.found(
         "c", strain.AXIS[zone, "compression bars"], closing, unit="mm", clause="10.1.1",
         title="Depth of the neutral axis, by equilibrium",
@@ -213,6 +212,11 @@ def doubly(steps: Steps, shape: Shape) -> Entry:
     return steps.line(double.M_R)
 
 
+def block_of(flexure: Mapping[str, Entry]) -> Entry:
+    """Return the depth of the stress block that M_r rests on: in the web where it reaches it."""
+    return flexure["a_w"] if "a_w" in flexure else flexure["a"]
+
+
 def record_state(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
     """Record inside the open part strain and forces at the resistance; return them by symbol.
 
@@ -223,7 +227,7 @@ def record_state(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
     steps.bind(**{n: flexure[n] for n in ("a", "C_f") if n in flexure})
     forces: dict[str, Entry] = {n: flexure[n] for n in ("C_s", "C_f") if n in flexure}
     if "C_f" in flexure:
-        block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
+        block = block_of(flexure)
         steps.bind(a_w=block, a=block)
         forces["C_w"] = steps.line(clause.WEB_FORCE)
     else:

@@ -17,7 +17,7 @@ from lineproof.beams.figures import (
     strain_stress_figure,
     stress_strain_figure,
 )
-from lineproof.beams.flexure import record_state
+from lineproof.beams.flexure import block_of, record_state
 from lineproof.beams.inputs import Shape
 from lineproof.drawing import Dash, Figure, Runs, symbol, to_json
 from lineproof.record import Entry
@@ -122,7 +122,7 @@ def record_strain_figure(sheet: Sheet, shape: Shape, layers: BarLayers) -> None:
         sheet.note("no-strains", _NOT_YIELDING, title="No figure of strains")
         return
     state = record_state(sheet, shape)
-    block = flexure["a_w"] if "a_w" in flexure else flexure["a"]
+    block = block_of(flexure)
     c, d, a, eps_s = flexure["c"].value, bars["d"].value, block.value, state["eps_s"].value
     forces = []
     if "C_s" in state:

@@ -6,6 +6,7 @@ from lineproof.beams.bottom_bars import COMPRESSION_BARS
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import Shape
 from lineproof.beams.record_figures import record_curve_figure
+from lineproof.beams.section import zone_of
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
 from lineproof.record import Entry
@@ -13,11 +14,6 @@ from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import strain, strain_closing
 
 SECOND_PATH = "second-path"
-
-
-def zone_of(shape: Shape) -> str:
-    """Return the compression zone of a shape with compression at the top."""
-    return "rectangle" if shape == "rectangular" else "tee"
 
 
 def record_proof(
@@ -38,7 +34,7 @@ def record_proof(
         "M_l", strain.MOMENT[key], moment, unit="kN.m", clause="10.1",
         title="Moment resistance, by layers and strains",
     )  # fmt: skip
-    steps.bind(M_r=M_r, M_rb=M_r)
+    steps.bind(**{name: M_r for name in proved.names if name != "M_l"})
     steps.check(proved)
 
 

@@ -45,6 +45,11 @@ def record_gross(sheet: Sheet, shape: Shape) -> None:
         sheet.line(line)
 
 
+def zone_of(shape: Shape) -> str:
+    """Return the compression zone of a shape with compression at the top: tee or rectangle."""
+    return "rectangle" if shape == "rectangular" else "tee"
+
+
 def compression_zone(sheet: Sheet, shape: Shape) -> dict[str, Entry]:
     """Return what b, b_w and h_f stand for with compression at the top; a rectangle has no h_f."""
     b_w = sheet.find("b_w")

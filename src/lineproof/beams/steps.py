@@ -18,8 +18,8 @@ def only(bound: Mapping[str, Entry], names: Iterable[str]) -> dict[str, Any]:
 class Steps:
     """Records lines at one place of a beam (midspan, an end).
 
-    ``place`` holds what the symbols stand for there (``d``, ``A_s``, ``b``, ...); symbols recorded
-    in the open part come before it.
+    ``place`` holds what the symbols stand for there (``d``, ``A_s``, ``b``, ...), before what the
+    sheet holds under them; what ``line`` and ``found`` record here, or ``bind`` names, replaces it.
     """
 
     def __init__(self, sheet: Sheet, place: Mapping[str, Entry]) -> None:

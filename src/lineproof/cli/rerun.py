@@ -28,7 +28,11 @@ MOST_CHANGES = 25
 
 @dataclass(frozen=True, slots=True)
 class Stored:
-    """A notebook as it lies on the disk; ``record`` is None when it has never been run."""
+    """A notebook as it lies on the disk.
+
+    ``record`` is None when it has never been run, or when what is stored does not matter
+    (``issue --update``).
+    """
 
     path: Path
     data: dict[str, Any]

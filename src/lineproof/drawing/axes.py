@@ -23,6 +23,7 @@ from lineproof.drawing.shapes import (
 TICK_TEXT = 2.6
 TICK_LENGTH = 1.0
 CURVE_WEIGHT = 0.45
+LEVEL_WEIGHT = 0.3
 MOST_DECIMALS = 9
 GROUPED_FROM = 10_000
 
@@ -101,16 +102,16 @@ def frame(
     return shapes
 
 
-def curve(
-    axes: Axes, points: Iterable[Point], dash: Dash = "solid", weight: float = CURVE_WEIGHT
-) -> Polyline:
+def curve(axes: Axes, points: Iterable[Point], dash: Dash = "solid") -> Polyline:
     """Draw a curve through value pairs; several curves are told apart by their dashes."""
-    return Polyline(tuple(axes.at(x, y) for x, y in points), "curve", weight, dash)
+    return Polyline(tuple(axes.at(x, y) for x, y in points), "curve", CURVE_WEIGHT, dash)
 
 
-def level(axes: Axes, y: float, dash: Dash, weight: float = 0.3) -> Line:
+def level(axes: Axes, y: float, dash: Dash) -> Line:
     """Draw a horizontal line at the value ``y`` over the whole width."""
-    return Line(axes.at(axes.x_range[0], y), axes.at(axes.x_range[1], y), "curve", weight, dash)
+    return Line(
+        axes.at(axes.x_range[0], y), axes.at(axes.x_range[1], y), "curve", LEVEL_WEIGHT, dash
+    )
 
 
 def drop_lines(axes: Axes, point: Point) -> list[Shape]:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import json
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 from typing import Any
@@ -22,6 +21,7 @@ from lineproof.package.summary import (
     notation_rows,
     summary_rows,
 )
+from lineproof.record.plain_data import json_text
 from lineproof.typeset.glyphs import tree_has_missing
 from lineproof.typeset.nodes import EQUALS, Math, row
 from lineproof.typeset.rows import PrintedRow, notation_of, printed_row
@@ -225,7 +225,7 @@ class _Builder:
             anchor=self.prefix,
             member=record.get("kind_of_member", ""),
             digest=record["digest"],
-            record_text=_json(record),
+            record_text=json_text(record),
             blocks=self._blocks(walk),
             summary=summary_rows(record["parts"], self.rows, self.notation, self.prefix),
             loads=load_rows(record["parts"], self.rows, self.prefix),
@@ -323,7 +323,3 @@ def _levelled(prose: Prose, level: int) -> tuple[Prose, int]:
         else:
             blocks.append(mark)
     return Prose(tuple(blocks)), level
-
-
-def _json(record: Mapping[str, Any]) -> str:
-    return json.dumps(record, ensure_ascii=False, allow_nan=False, separators=(",", ":"))

@@ -83,12 +83,10 @@ def summary_rows(
 
     A proof of the calculation itself (two paths agree) that holds is not a check of the beam.
     """
-    groups = {entry["id"]: part["title"] for part in parts for entry in part["entries"]}
-    entries = [entry for part in parts for entry in part["entries"]]
-    checks = [entry for entry in entries if entry["kind"] == "check"]
+    entries = [(part["title"], entry) for part in parts for entry in part["entries"]]
     made = []
-    for entry in checks:
-        if entry.get("proof") and entry["holds"]:
+    for group, entry in entries:
+        if entry["kind"] != "check" or (entry.get("proof") and entry["holds"]):
             continue
         printed = rows[entry["id"]]
         demand, resistance = _sides(entry, notation)
@@ -103,7 +101,7 @@ def summary_rows(
                 ratio=printed.ratio,
                 verdict=printed.verdict,
                 holds=printed.holds,
-                group=groups.get(entry["id"], ""),
+                group=group,
             )
         )
     return tuple(made)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import json
 import math
 import re
 from collections.abc import Mapping
@@ -12,6 +13,11 @@ from lineproof.errors import UserError
 DEEPEST = 60
 LARGEST_INTEGER = 2**53
 _NUMBER_TEXT = re.compile(r"-?(?:0|[1-9][0-9]{0,29})(?:\.[0-9]{1,40})?(?:e-?[0-9]{1,3})?\Z")
+
+
+def json_text(data: Mapping[str, Any]) -> str:
+    """Return plain data as JSON text, the same for the same data."""
+    return json.dumps(data, ensure_ascii=False, allow_nan=False, separators=(",", ":"))
 
 
 def check_plain(data: object) -> None:

@@ -8,6 +8,7 @@ from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.record.build import SCHEMA
+from lineproof.record.plain_data import json_text
 from lineproof.record.validate import check_record
 
 MIME = "application/vnd.lineproof.record+json"
@@ -73,7 +74,7 @@ class Record:
 
     def to_text(self) -> str:
         """Return the record as JSON text, the same for the same record."""
-        return json.dumps(self.data, ensure_ascii=False, allow_nan=False, separators=(",", ":"))
+        return json_text(self.data)
 
     def __repr__(self) -> str:
         """Show what the record holds."""

@@ -1,27 +1,12 @@
-"""Formulas and criteria that a designer writes as text in the notebook."""
+"""Criteria that a designer writes as text in the notebook."""
 
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable
 
-from lineproof.formula import (
-    Criterion,
-    Formula,
-    Name,
-    Notation,
-    System,
-    criterion,
-    formula,
-)
+from lineproof.formula import Criterion, Name, Notation, criterion
 
 Units = Callable[[Iterable[str]], dict[str, str]]
-
-
-def own_formula(
-    text: str, unit: str | None, title: str, system: System, notation: Notation
-) -> Formula:
-    """Read a designer's formula; the unit comes from the call or from the notation."""
-    return formula(text, unit=unit, title=title, system=system, notation=notation)
 
 
 def own_criterion(

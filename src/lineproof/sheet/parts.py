@@ -175,7 +175,10 @@ def check_key(key: str) -> None:
     plain = key.replace("-", "").replace("_", "")
     if not (plain.isascii() and plain.isalnum() and len(key) <= _LONGEST_ID and key[0].isalnum()):
         shown = repr(key[:_LONGEST_ID])
-        raise UserError(f"key {shown}: use letters, digits and hyphens, such as 'flexure-2'")
+        raise UserError(
+            f"key {shown}: use letters, digits and hyphens, {_LONGEST_ID} at most, "
+            "such as 'flexure-2'"
+        )
 
 
 def check_calc_id(calc_id: object) -> None:

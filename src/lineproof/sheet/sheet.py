@@ -9,6 +9,7 @@ from typing import Any, ClassVar
 
 from lineproof.errors import UserError
 from lineproof.formula import Criterion, Formula, Notation, Symbol, System, symbol_from_id
+from lineproof.formula import formula as read_formula
 from lineproof.formula.notation import check_id
 from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
@@ -18,7 +19,7 @@ from lineproof.record.entry import CHECK, DECISION, FIGURE, FOUND, GIVEN, LINE, 
 from lineproof.record.procedures import run
 from lineproof.record.sources import FoundSource, GivenSource, LookupSource, ShownSource
 from lineproof.sheet.order import in_order, out_of_date
-from lineproof.sheet.own import own_criterion, own_formula
+from lineproof.sheet.own import own_criterion
 from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.parts import Parts, check_calc_id, check_key
 from lineproof.sheet.project import read_project
@@ -175,7 +176,9 @@ class Sheet(Parts):
         bound: Mapping[str, Entry],
     ) -> Entry:
         if isinstance(formula, str):
-            formula = own_formula(formula, unit, title, system, self.notation)
+            formula = read_formula(
+                formula, unit=unit, title=title, system=system, notation=self.notation
+            )
             prove(formula, self._units(formula.names, bound))
             unit = None
         if unit is not None:

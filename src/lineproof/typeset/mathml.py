@@ -28,11 +28,10 @@ _THIN = '<mspace width="0.1667em"></mspace>'
 _COMMA_SPACE = '<mo separator="true">,</mo>'
 
 
-def mathml(math: Math, *, display: bool = False) -> str:
+def mathml(math: Math) -> str:
     """Return a complete ``<math>`` element (its text escaped, safe inside HTML)."""
-    mode = ' display="block"' if display else ""
     # displaystyle keeps fractions legible on paper while the element stays in the line.
-    return f'<math{mode} displaystyle="true">{_write(math)}</math>'
+    return f'<math displaystyle="true">{_write(math)}</math>'
 
 
 def _is_tall(math: Math) -> bool:

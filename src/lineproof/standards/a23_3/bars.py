@@ -49,9 +49,6 @@ GRADES = LookupTable(
     basis=G30_18_TABLE,
 )
 
-DENSITY_OF_STEEL = 0.00785
-"""Mass of a bar per length and area [kg/m per mm2]."""
-
 LEAST_CLEAR = _formula(
     "s_min = max(1.4*d_b, 1.4*a_max, 30)",
     clause="A23.1 6.6.5.2",
