@@ -84,6 +84,7 @@ def test_capacity_at_shares(record: Record, share: int) -> None:
     assert A_s == pytest.approx(8262 * share / 100, abs=0.6)
     expected = by_hand(A_s, d)
     assert number(record, f"capacity-{share}/M_r") == pytest.approx(expected, rel=1e-6)
+    assert number(record, f"capacity-{share}/M_l") == pytest.approx(expected, rel=1e-3)
     rows = record.entries["capacity/shares"]["rows"]
     row = next(r for r in rows if r[0] == str(share))
     # three digits are printed
@@ -115,6 +116,7 @@ def test_bars_chosen_and_both_paths(record: Record) -> None:
     assert checks == {
         "bars/bars-fit", "bars/bars-fit-2", "flexure/yield", "flexure/yield-upper",
         "second-path/second-path", "second-path-balanced/second-path",
+        *(f"capacity-{share}/second-path" for share in (25, 50, 75, 100)),
     }  # fmt: skip
     assert record.data["status"]["scope"] == "preliminary: section study, no loads"
 
