@@ -1,0 +1,151 @@
+"""Moments and shears of every load case of a beam, at any station, with the case that governs.
+
+Sign convention as in ``analysis.curves``: x from the left axis of the span, loads positive
+downward, M positive where the bottom is in tension, V = dM/dx. N and mm.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Literal
+
+import numpy as np
+
+from lineproof.beams.analysis.arrangements import (
+    Arrangement,
+    Cases,
+    Combination,
+    LoadCase,
+    cases_of,
+    factored_combinations,
+    standard_arrangements,
+)
+from lineproof.beams.analysis.curves import Floats, Side
+from lineproof.beams.analysis.envelope import CaseSolution
+from lineproof.beams.analysis.model import Beam, Load
+from lineproof.beams.analysis.solve import Row, Solution, solve
+
+End = Literal["left", "right"]
+"""An end of a span: the one at its left or at its right support."""
+
+
+@dataclass(frozen=True, slots=True)
+class Demand:
+    """Moment [N.mm] and shear [N] of one load case at one place, as a concurrent pair.
+
+    ``x`` [mm] is measured from the left axis of the span; ``row`` is the place of the case in
+    ``Forces.cases``.
+    """
+
+    span: int
+    x: float
+    side: Side
+    row: int
+    case: LoadCase
+    M: float
+    V: float
+
+
+@dataclass(frozen=True, eq=False)
+class Forces:
+    """A solved beam with all its load cases.
+
+    ``solution`` has one row a load type and span, ``factors`` (cases, rows) makes the cases.
+    """
+
+    beam: Beam
+    loads: tuple[Load, ...]
+    solution: Solution
+    cases: tuple[LoadCase, ...]
+    factors: Floats
+
+    @classmethod
+    def of(
+        cls,
+        beam: Beam,
+        loads: Iterable[Load],
+        combinations: Sequence[Combination] | None = None,
+        arrangements: Sequence[Arrangement] | None = None,
+    ) -> Forces:
+        """Solve a beam for its loads; by default all strength combinations and arrangements.
+
+        Raises :class:`UserError` with every fault of beam and loads.
+        """
+        kept = tuple(loads)
+        solution = solve(beam, kept)
+        kinds = tuple(dict.fromkeys(kind for kind, _ in solution.rows))
+        if combinations is None:
+            combinations = factored_combinations(kinds)
+        if arrangements is None:
+            arrangements = standard_arrangements(len(beam.spans), beyond=True)
+        made: Cases = cases_of(solution.rows, combinations, arrangements)
+        return cls(beam, kept, solution, made.names, made.factors)
+
+    @cached_property
+    def solved(self) -> CaseSolution:
+        """The solution of every case."""
+        return CaseSolution(self.solution.combined(self.factors), self.cases)
+
+    def pairs(self, span: int, x: float, side: Side = "right") -> tuple[Floats, Floats]:
+        """Return M [N.mm] and V [N] of every case at one station (cases,), concurrent."""
+        curves = self.solved.solution.span(span)
+        at = np.array([x])
+        return curves.moment(at)[:, 0], curves.shear(at, side)[:, 0]
+
+    def along(self, span: int, x: Floats, side: Side = "right") -> tuple[Floats, Floats]:
+        """Return M and V of every case at stations x: (cases, stations)."""
+        curves = self.solved.solution.span(span)
+        return curves.moment(x), curves.shear(x, side)
+
+    def demand(self, span: int, x: float, side: Side, row: int) -> Demand:
+        """Return the pair of one case at one place."""
+        M, V = self.pairs(span, x, side)
+        return Demand(span, x, side, row, self.cases[row], float(M[row]), float(V[row]))
+
+    def sag(self, span: int) -> Demand:
+        """Return the largest moment of a span between the faces, at its exact station."""
+        curves = self.solved.solution.span(span)
+        start, end = self.beam.faces(span)
+        found = curves.moment_extremes()
+        x = np.clip(found.x_largest, start, end)
+        values = np.where(x == found.x_largest, found.largest, -np.inf)
+        for face in (start, end):
+            values = np.maximum(values, curves.moment(np.array([face]))[:, 0])
+        row = int(values.argmax())
+        at = float(x[row])
+        if values[row] > found.largest[row] * (1 + 1e-12) or at != found.x_largest[row]:
+            ends = curves.moment(np.array([start, end]))[row]
+            at = start if ends[0] >= ends[1] else end
+        return self.demand(span, at, "right" if at < end else "left", row)
+
+    def hog(self, support: int, side: End) -> Demand:
+        """Return the smallest moment at a face of a support; ``side`` is the face's side of it."""
+        span = support - 1 if side == "left" else support
+        start, end = self.beam.faces(span)
+        x = end if side == "left" else start
+        M, _ = self.pairs(span, x, side)
+        return self.demand(span, x, side, int(M.argmin()))
+
+    def face(self, support: int, side: End) -> tuple[int, float]:
+        """Return span number and x of a face of a support."""
+        span = support - 1 if side == "left" else support
+        start, end = self.beam.faces(span)
+        return span, end if side == "left" else start
+
+    def has_span(self, support: int, side: End) -> bool:
+        """Tell whether a span lies on that side of the support, which is not a free end."""
+        if self.beam.supports[support - 1].kind == "free":
+            return False
+        return 1 <= (support - 1 if side == "left" else support) <= len(self.beam.spans)
+
+    def factors_of(self, row: int) -> Mapping[Row, float]:
+        """Return the factors of a case on the rows of the solution that act in it."""
+        numbers = self.factors[row].tolist()
+        return {key: f for key, f in zip(self.solution.rows, numbers, strict=True) if f}
+
+
+def other(end: End) -> End:
+    """Return the other end or side."""
+    return "right" if end == "left" else "left"
