@@ -72,3 +72,9 @@ def need(row: Mapping[str, Any], what: str, /, **kinds: type) -> None:
         value = row.get(name)
         if not isinstance(value, kind) or (kind is not bool and isinstance(value, bool)):
             raise UserError(f"record: {what}: {name!r} is missing or not a {kind.__name__}")
+
+
+def check_texts(values: object, what: str) -> None:
+    """Refuse anything but a list of texts."""
+    if not isinstance(values, list) or not all(isinstance(value, str) for value in values):
+        raise UserError(f"record: {what} holds something else than a list of texts")

@@ -22,7 +22,15 @@ from lineproof.record.entry import (
     TABLE,
     VALUES,
 )
-from lineproof.record.plain_data import check_plain, is_number, is_number_text, need, shown
+from lineproof.record.plain_data import (
+    check_plain,
+    check_texts,
+    is_number,
+    is_number_text,
+    need,
+    shown,
+)
+from lineproof.record.validate_shown import FILES, check_placing, check_table
 
 Data = Mapping[str, Any]
 _KINDS = (*VALUES, *CRITERIA, FIGURE, NOTE, TABLE)
@@ -70,10 +78,10 @@ def _check_tail(data: Data) -> None:
             _row(row, "confirm"), "confirm",
             clause=str, what=str, basis=str, confirmed=str, lines=list,
         )  # fmt: skip
-        _texts(row["lines"], "confirm")
+        check_texts(row["lines"], "confirm")
     status = data["status"]
     need(status, "status", scope=str, not_covered=list, failed=list)
-    _texts(status["failed"], "status")
+    check_texts(status["failed"], "status")
     for row in status["not_covered"]:
         need(_row(row, "status"), "status", check=str, clause=str)
 
@@ -84,11 +92,6 @@ def _row(row: object, what: str) -> Data:
     return row
 
 
-def _texts(values: object, what: str) -> None:
-    if not isinstance(values, list) or not all(isinstance(value, str) for value in values):
-        raise UserError(f"record: {what} holds something else than a list of texts")
-
-
 class _Entries:
     """Checks the entries in order: each may rest only on values that stand before it."""
 
@@ -96,6 +99,7 @@ class _Entries:
         self.faults = faults
         self.kinds: dict[str, str] = {}
         self.parts: set[str] = set()
+        self.files: dict[str, str] = {}
 
     def check_part(self, part: object) -> None:
         """Check one part with all its entries."""
@@ -124,7 +128,9 @@ class _Entries:
             raise UserError(f"record: {entry_id[:80]!r} of kind {kind[:20]!r} is not an entry")
         if entry_id in self.kinds:
             raise UserError(f"record: {entry_id} stands twice")
-        self._arguments(entry_id, entry.get("args", {}))
+        # A table may show checks, line by line.
+        shows = (*VALUES, *CRITERIA) if kind == TABLE else VALUES
+        self._arguments(entry_id, entry.get("args", {}), shows)
         self.kinds[entry_id] = kind
         if kind in VALUES:
             check_id(symbol)
@@ -133,8 +139,10 @@ class _Entries:
         _CHECKS[kind](entry_id, entry)
         if kind == FOUND:
             self._arguments(entry_id, entry["closing"]["args"])
+        if kind in FILES:
+            self._file(entry_id, entry, FILES[kind])
 
-    def _arguments(self, entry_id: str, args: object) -> None:
+    def _arguments(self, entry_id: str, args: object, kinds: tuple[str, ...] = VALUES) -> None:
         if not isinstance(args, dict):
             raise UserError(f"record: {entry_id}: 'args' is not a dict")
         for target in args.values():
@@ -142,8 +150,20 @@ class _Entries:
                 raise UserError(
                     f"record: {entry_id} rests on {shown(target)}, which does not stand before it"
                 )
-            if self.kinds[target] not in VALUES:
+            if self.kinds[target] not in kinds:
                 raise UserError(f"record: {entry_id} rests on {target}, which is no value")
+
+    def _file(self, entry_id: str, entry: Data, ending: str) -> None:
+        """Refuse a second file of one name; some disks do not tell B from b."""
+        stem = entry.get(ending)
+        if stem is not None:
+            name = f"{stem.casefold()}.{ending}"
+            if name in self.files:
+                raise UserError(
+                    f"record: {entry_id}: {self.files[name]} is also called {ending}={stem!r}; "
+                    "give each file its own name"
+                )
+            self.files[name] = entry_id
 
 
 def _is_id(*pieces: str) -> bool:
@@ -224,24 +244,16 @@ def _found(entry_id: str, entry: Data) -> None:
 
 def _figure(entry_id: str, entry: Data) -> None:
     need(entry, entry_id, figure=dict, alt=str, caption=str)
+    check_placing(entry_id, entry)
 
 
 def _note(entry_id: str, entry: Data) -> None:
     need(entry, entry_id, text=str)
 
 
-def _table(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, columns=list, rows=list)
-    _texts(entry["columns"], entry_id)
-    for row in entry["rows"]:
-        _texts(row, entry_id)
-        if len(row) != len(entry["columns"]):
-            raise UserError(f"record: {entry_id}: a row of the table has too few or many cells")
-
-
 _CHECKS = {
     GIVEN: _given, LOOKUP: _lookup, LINE: _line, FOUND: _found,
-    DECISION: _criterion, CHECK: _criterion, FIGURE: _figure, NOTE: _note, TABLE: _table,
+    DECISION: _criterion, CHECK: _criterion, FIGURE: _figure, NOTE: _note, TABLE: check_table,
 }  # fmt: skip
 
 

@@ -15,14 +15,15 @@ from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
 from lineproof.record import Entry, Part, Procedure, Record
 from lineproof.record.build import build
-from lineproof.record.entry import CHECK, DECISION, FIGURE, FOUND, GIVEN, LINE, LOOKUP, NOTE, TABLE
+from lineproof.record.entry import CHECK, DECISION, FOUND, GIVEN, LINE, LOOKUP
 from lineproof.record.procedures import run
-from lineproof.record.sources import FoundSource, GivenSource, LookupSource, ShownSource
+from lineproof.record.sources import FoundSource, GivenSource, LookupSource
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion
 from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind
-from lineproof.sheet.parts import Parts, check_calc_id, check_key
+from lineproof.sheet.parts import check_calc_id, check_key
 from lineproof.sheet.project import read_project
+from lineproof.sheet.shown import Shown
 from lineproof.sheet.tables import LookupTable
 
 _NOT_COMPUTED = (ArithmeticError, ValueError, TypeError)
@@ -36,7 +37,7 @@ class PartView:
         self.sheet, self.key = sheet, key
 
 
-class Sheet(Parts):
+class Sheet(Shown):
     """A calculation being made.
 
     Everything is recorded inside a part; opening an existing key again replaces that part in
@@ -273,7 +274,7 @@ class Sheet(Parts):
             raise self._failed(test, args, None)
         return left, right
 
-    # -- found values, figures, notes --------------------------------------------------------
+    # -- found values --------------------------------------------------------------------------
 
     def found(
         self,
@@ -320,43 +321,6 @@ class Sheet(Parts):
             )
         entry.extra = {"closing_args": closing_args, "closing_sides": sides}
         return self._record(entry)
-
-    def figure(
-        self,
-        key: str,
-        drawing: Mapping[str, Any],
-        *,
-        title: str,
-        alt: str,
-        rests_on: Iterable[Entry] = (),
-    ) -> Entry:
-        """Record a figure (plain shapes as JSON data) with its caption and alternative text."""
-        content = {"figure": dict(drawing), "alt": alt, "caption": title}
-        return self._show(FIGURE, key, ShownSource(title, alt, content), rests_on)
-
-    def table(
-        self,
-        key: str,
-        columns: list[str],
-        rows: list[list[str]],
-        *,
-        title: str,
-        rests_on: Iterable[Entry] = (),
-    ) -> Entry:
-        """Record a table of printed texts."""
-        return self._show(
-            TABLE, key, ShownSource(title, title, {"columns": columns, "rows": rows}), rests_on
-        )
-
-    def note(
-        self, key: str, text: str, *, title: str = "", clause: str = "", basis: str = ""
-    ) -> Entry:
-        """Record a plain sentence."""
-        return self._show(NOTE, key, ShownSource(title, text, {"text": text}, clause, basis), ())
-
-    def _show(self, kind: str, key: str, source: ShownSource, rests_on: Iterable[Entry]) -> Entry:
-        check_key(key)
-        return self._record(Entry(self._open_part(), key, kind, source, tuple(rests_on), None))
 
     def _symbol(self, symbol: str, title: str) -> Symbol:
         known = self.notation.get(symbol)
