@@ -168,7 +168,7 @@ class _Builder:
         return {
             "procedure": {"name": made.name, "version": made.version, "title": made.title},
             "settings": dict(source.settings),
-            "args": _arguments(made.names, entry.args),
+            "args": _arguments(source.names, entry.args),
             "closing": {
                 "formula": test.text,
                 "args": _arguments(test.names, closing_args),

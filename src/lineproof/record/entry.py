@@ -102,9 +102,8 @@ class Entry:
 
     def _argument_names(self) -> Iterable[str]:
         """Return what the arguments are called; what only shows calls them nothing."""
-        if self.kind in (LINE, DECISION, CHECK):
-            return tuple(self.source.names)
-        return tuple(self.source.procedure.names) if self.kind == FOUND else [""] * len(self.args)
+        named = self.kind in (LINE, DECISION, CHECK, FOUND)
+        return tuple(self.source.names) if named else [""] * len(self.args)
 
     def _pieces(self) -> Iterable[str]:
         if self.kind in (LINE, DECISION, CHECK):

@@ -193,7 +193,7 @@ class Printer:
         self._digits[id(entry)] = digits
         texts = {
             name: _argument_text(arg, argument, argument.digits, "N-mm")
-            for name, arg in zip(entry.source.procedure.names, entry.args, strict=True)
+            for name, arg in zip(entry.source.names, entry.args, strict=True)
             for argument in [self._argument(arg)]
         }
         return {

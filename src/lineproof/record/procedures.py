@@ -5,7 +5,7 @@ The registry lets a record be recomputed without running any text that came with
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Collection, Mapping
 from dataclasses import dataclass
 
 PROCEDURES: dict[str, Procedure] = {}
@@ -16,18 +16,23 @@ class Procedure:
     """A named numerical procedure.
 
     ``function`` takes the arguments ``names`` as floats in internal units, then the settings by
-    keyword; raise ``version`` whenever its results change.
+    keyword; raise ``version`` whenever its results change. With ``names`` None it takes whatever
+    arguments a value needs, as one mapping by name: a beam has as many spans as it has.
     """
 
     name: str
     version: int
     title: str
-    names: tuple[str, ...]
+    names: tuple[str, ...] | None
     function: Callable[..., float]
+
+    def takes(self, names: Collection[str]) -> bool:
+        """Tell whether these are the arguments it takes."""
+        return self.names is None or set(self.names) == set(names)
 
 
 def procedure(
-    name: str, version: int, title: str, names: tuple[str, ...]
+    name: str, version: int, title: str, names: tuple[str, ...] | None
 ) -> Callable[[Callable[..., float]], Procedure]:
     """Register a function as a procedure."""
 
@@ -47,4 +52,6 @@ def recall(name: str, version: int) -> Procedure | None:
 
 def run(made: Procedure, values: Mapping[str, float], settings: Mapping[str, float]) -> float:
     """Run a procedure on named values."""
+    if made.names is None:
+        return float(made.function(values, **settings))
     return float(made.function(*[values[name] for name in made.names], **settings))

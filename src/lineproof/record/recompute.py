@@ -50,9 +50,12 @@ def recompute(record: Record) -> list[Difference]:
     values: dict[str, float] = {}
     units = {i: entry["unit"] for i, entry in record.entries.items() if "unit" in entry}
     differences: list[Difference] = []
-    for entry in record.entries.values():
+    # Values found together close one another: closings are compared when all values are known.
+    closings = [e for e in record.entries.values() if e["kind"] == FOUND]
+    steps = [(e, _differences) for e in record.entries.values()] + [(e, _closing) for e in closings]
+    for entry, compare in steps:
         try:
-            differences.extend(_differences(entry, values, units))
+            differences.extend(compare(entry, values, units))
         except (ArithmeticError, ValueError, TypeError, KeyError) as error:
             stored = str(entry.get("value", entry.get("holds", "")))
             differences.append(Difference(entry["id"], "value", stored, f"failed: {error}"))
@@ -84,8 +87,12 @@ def _differences(
             yield Difference(entry_id, "value", f"{entry['value']:.10g}", f"{again:.10g}")
         for found in _printed(entry, value, values, units):
             yield Difference(entry_id, *found)
-        if kind == FOUND:
-            yield from _criterion(entry_id, entry["closing"], values, units)
+
+
+def _closing(
+    entry: Mapping[str, Any], values: dict[str, float], units: Mapping[str, str]
+) -> Iterator[Difference]:
+    yield from _criterion(entry["id"], entry["closing"], values, units)
 
 
 def _printed(
@@ -116,8 +123,8 @@ def _value(entry: Mapping[str, Any], values: Mapping[str, float]) -> float:
     if made is None:
         raise UserError(f"procedure {entry['procedure']['name']!r} is not known here")
     named = {name: values[target] for name, target in entry["args"].items()}
-    if set(made.names) != set(named):
-        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names)}")
+    if not made.takes(named):
+        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names or ())}")
     value = run(made, named, entry["settings"])
     if not math.isfinite(value):
         raise UserError(f"procedure {made.name!r} finds no finite number")

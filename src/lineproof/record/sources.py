@@ -49,10 +49,14 @@ class LookupSource:
 
 @dataclass(frozen=True, slots=True)
 class FoundSource:
-    """A value found by a registered procedure, with the criterion by which it is confirmed."""
+    """A value found by a registered procedure, with the criterion by which it is confirmed.
+
+    ``names`` are what the procedure calls the entries that the value rests on, in their order.
+    """
 
     symbol: Symbol
     procedure: Procedure
+    names: tuple[str, ...]
     settings: Mapping[str, float]
     unit: str
     closing: Criterion

@@ -50,7 +50,7 @@ def check_record(data: Data) -> None:
     entries = _Entries(faults)
     for part in data["parts"]:
         entries.check_part(part)
-    for check in (_check_head, _check_tail):
+    for check in (lambda _: entries.check_closings(), _check_head, _check_tail):
         try:
             check(data)
         except UserError as error:
@@ -98,6 +98,7 @@ class _Entries:
     def __init__(self, faults: FaultList) -> None:
         self.faults = faults
         self.kinds: dict[str, str] = {}
+        self.closings: list[tuple[str, Data]] = []
         self.parts: set[str] = set()
         self.files: dict[str, str] = {}
 
@@ -138,9 +139,21 @@ class _Entries:
                 raise UserError(f"record: {entry_id} has no finite value in a known unit")
         _CHECKS[kind](entry_id, entry)
         if kind == FOUND:
-            self._arguments(entry_id, entry["closing"]["args"])
+            self.closings.append((key, entry))
         if kind in FILES:
             self._file(entry_id, entry, FILES[kind])
+
+    def check_closings(self) -> None:
+        """Check what closes found values: entries before them, or found with them in their part."""
+        order = {entry_id: place for place, entry_id in enumerate(self.kinds)}
+        for key, entry in self.closings:
+            self._arguments(entry["id"], entry["closing"]["args"])
+            for target in entry["closing"]["args"].values():
+                together = self.kinds[target] == FOUND and target.startswith(f"{key}/")
+                if order[target] > order[entry["id"]] and not together:
+                    raise UserError(
+                        f"record: {entry['id']} is closed by {target}, which follows it"
+                    )
 
     def _arguments(self, entry_id: str, args: object, kinds: tuple[str, ...] = VALUES) -> None:
         if not isinstance(args, dict):

@@ -9,10 +9,13 @@ from lineproof.record import Entry, Part
 
 
 def rests_on(entry: Entry) -> Iterator[Entry]:
-    """Give the entries that an entry rests on, those of its closing criterion included."""
+    """Give the entries that an entry rests on, those of its closing criterion included.
+
+    Left out are those of its own part: values found together close one another.
+    """
     yield from entry.args
     for arg in (entry.extra or {}).get("closing_args", ()):
-        if arg is not entry:
+        if arg.part is not entry.part:
             yield arg
 
 

@@ -126,6 +126,13 @@ class Parts:
             self._scope_of_part[entry.symbol] = entry
         return entry
 
+    def take_back(self, symbols: Iterable[str]) -> None:
+        """Take entries out of the open part again: what does not close is not recorded."""
+        part = self._open_part()
+        for symbol in symbols:
+            part.entries.pop(symbol, None)
+            self._scope_of_part.pop(symbol, None)
+
     def _keep_apart(self, part: Part) -> None:
         """Refuse in a part of the user's own a symbol that the calculation finds by its name."""
         if part.key in self.expected:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Callable, Iterable, Mapping
 from pathlib import Path
 from typing import Any, ClassVar
@@ -15,9 +14,9 @@ from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
 from lineproof.record import Entry, Part, Procedure, Record
 from lineproof.record.build import build
-from lineproof.record.entry import CHECK, DECISION, FOUND, GIVEN, LINE, LOOKUP
-from lineproof.record.procedures import run
-from lineproof.record.sources import FoundSource, GivenSource, LookupSource
+from lineproof.record.entry import CHECK, DECISION, GIVEN, LINE, LOOKUP
+from lineproof.record.sources import GivenSource, LookupSource
+from lineproof.sheet.finding import NOT_COMPUTED, Wanted, found_set
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion
 from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind
@@ -25,9 +24,6 @@ from lineproof.sheet.parts import check_calc_id, check_key
 from lineproof.sheet.project import read_project
 from lineproof.sheet.shown import Shown
 from lineproof.sheet.tables import LookupTable
-
-_NOT_COMPUTED = (ArithmeticError, ValueError, TypeError)
-"""What arithmetic without a real result raises; TypeError where a complex root is compared."""
 
 
 class PartView:
@@ -97,7 +93,7 @@ class Sheet(Shown):
         basis: str = "",
     ) -> Entry:
         """Record a value as typed; its unit must be of the kind of ``unit`` or of the notation."""
-        data = self._symbol(symbol, title)
+        data = self.symbol(symbol, title)
         if unit is not None:
             unit = unit_named(unit).spelling
             keep_to(self.notation, symbol, unit)
@@ -124,7 +120,7 @@ class Sheet(Shown):
             )
         number, unit = numbers[column], unit_named(table.columns[column]).spelling
         keep_to(self.notation, symbol, unit)
-        data = self._symbol(symbol, title)
+        data = self.symbol(symbol, title)
         read = read_quantity(symbol, f"{number} {unit}", unit)
         made = LookupSource(
             data, table.name, row, read, unit, title or data.meaning, table.source,
@@ -154,7 +150,7 @@ class Sheet(Shown):
         except KeyError:
             self._bring_in(formula.names)
             return self.line(formula, title=title)
-        except _NOT_COMPUTED as error:
+        except NOT_COMPUTED as error:
             raise self._failed(formula, self._arguments(formula.names, {}), error) from None
         # A complex number or an integer has another class; inf - inf and nan - nan are not zero.
         if value.__class__ is not float or value - value != 0.0:
@@ -187,7 +183,7 @@ class Sheet(Shown):
         args = self._arguments(formula.names, bound)
         try:
             value = formula.function(*[a.value for a in args])
-        except _NOT_COMPUTED as error:
+        except NOT_COMPUTED as error:
             raise self._failed(formula, args, error) from None
         if not isinstance(value, float) or value - value != 0.0:
             raise self._failed(formula, args, None)
@@ -268,7 +264,7 @@ class Sheet(Shown):
         values = [a.value for a in args]
         try:
             left, right = (side(*values) for side in test.functions)
-        except _NOT_COMPUTED as error:
+        except NOT_COMPUTED as error:
             raise self._failed(test, args, error) from None
         if not all(isinstance(v, float) and v - v == 0.0 for v in (left, right)):
             raise self._failed(test, args, None)
@@ -294,35 +290,31 @@ class Sheet(Shown):
         The closing criterion may name the found symbol, the procedure's arguments and whatever
         else is in scope; if it does not hold the value is refused.
         """
-        inner = {n: e for n, e in bound.items() if n in procedure.names}
-        args = self._arguments(procedure.names, inner)
-        settings = dict(settings or {})
-        named = {n: a.value for n, a in zip(procedure.names, args, strict=True)}
-        try:
-            value = run(procedure, named, settings)
-        except _NOT_COMPUTED as error:
-            raise UserError(f"{symbol}: procedure {procedure.name!r} failed ({error})") from None
-        if not math.isfinite(value):
-            raise UserError(f"{symbol}: procedure {procedure.name!r} found no finite number")
-        unit = unit_named(unit).spelling
-        keep_to(self.notation, symbol, unit)
-        if symbol not in closing.names:
-            raise UserError(f"{symbol}: its closing criterion {closing.text!r} does not name it")
-        source = FoundSource(
-            self._symbol(symbol, title), procedure, settings, unit, closing, title, clause, basis
-        )
-        entry = Entry(self._open_part(), symbol, FOUND, source, args, value)
-        outer = {n: e for n, e in (bound | {symbol: entry}).items() if n in closing.names}
-        closing_args = self._arguments(closing.names, outer)
-        sides = self._sides(closing, closing_args)
-        if not closing.holds(*sides):
-            raise UserError(
-                f"{symbol}: found {entry!r}, but its closing criterion {closing.text!r} fails"
-            )
-        entry.extra = {"closing_args": closing_args, "closing_sides": sides}
-        return self._record(entry)
+        names = procedure.names or ()
+        inner = {n: e for n, e in bound.items() if n in names}
+        args = dict(zip(names, self._arguments(names, inner), strict=True))
+        wanted = Wanted(symbol, closing, unit, args, settings or {}, title, clause, basis, bound)
+        return found_set(self, procedure, [wanted])[symbol]
 
-    def _symbol(self, symbol: str, title: str) -> Symbol:
+    def found_set(self, procedure: Procedure, wanted: Iterable[Wanted]) -> dict[str, Entry]:
+        """Record values found together, each closed by a criterion that may name the others."""
+        return found_set(self, procedure, wanted)
+
+    def take_in(
+        self, symbol: str, kind: str, source: Any, args: tuple[Entry, ...], value: float
+    ) -> Entry:
+        """Record an entry made elsewhere in the room inside the open part."""
+        return self._record(Entry(self._open_part(), symbol, kind, source, args, value))
+
+    def compared(
+        self, test: Criterion, bound: Mapping[str, Entry]
+    ) -> tuple[tuple[Entry, ...], tuple[float, float]]:
+        """Return the arguments of a criterion and both its sides."""
+        args = self._arguments(test.names, bound)
+        return args, self._sides(test, args)
+
+    def symbol(self, symbol: str, title: str) -> Symbol:
+        """Return what the notation says of a symbol, else what its id says."""
         known = self.notation.get(symbol)
         return known if known is not None else symbol_from_id(symbol, title)
 
