@@ -1,0 +1,100 @@
+"""The schedule and the quantities as printed tables: columns and rows of text."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from lineproof.beams.continuous.bending import BentShape
+from lineproof.beams.continuous.layout import StirrupZone
+from lineproof.beams.continuous.quantities import Quantities
+from lineproof.beams.continuous.schedule import BarItem, Schedule
+
+DASH = "–"
+
+
+@dataclass(frozen=True, slots=True)
+class PrintedTable:
+    """What ``sheet.table`` prints: title, columns and rows of text."""
+
+    title: str
+    columns: tuple[str, ...]
+    rows: tuple[tuple[str, ...], ...]
+
+
+def bar_table(bars: Schedule) -> PrintedTable:
+    """Return the bar schedule, its total mass in the last row."""
+    columns = (
+        "Mark", "Size", "Number", "Cut length, mm", "Shape", "Code", "Legs, mm", "kg each", "kg",
+    )  # fmt: skip
+    rows = [_bar_row(item) for item in bars.items]
+    rows.append(("Total", *[""] * (len(columns) - 2), f"{bars.mass:.1f}"))
+    return PrintedTable("Bar schedule", columns, tuple(rows))
+
+
+def _bar_row(item: BarItem) -> tuple[str, ...]:
+    shape = item.shape
+    return (
+        item.mark, item.size, str(item.number), f"{shape.cut:.0f}", shape.words,
+        shape.code or DASH, shape.legs_text or DASH, f"{shape.mass:.3f}", f"{item.mass:.1f}",
+    )  # fmt: skip
+
+
+def stirrup_table(bars: Schedule) -> PrintedTable:
+    """Return the stirrups by span and zone, distances from the left end of the clear length."""
+    columns = (
+        "Span", "Mark", "Stirrups", "Legs", "Spacing, mm", "Number", "From, mm", "To, mm", "Form",
+        "Outside, mm", "Cut length, mm", "kg",
+    )  # fmt: skip
+    rows = []
+    for each in bars.sets:
+        zone = each.zone
+        rows.append((
+            str(zone.span), zone.mark, zone.size, str(zone.legs), _spacing(zone),
+            str(zone.number), f"{each.first:.0f}", f"{each.last:.0f}",
+            "closed" if zone.closed else "open",
+            " + ".join(_outside(shape) for shape, _ in each.pieces),
+            " + ".join(f"{_times(count)}{shape.cut:.0f}" for shape, count in each.pieces),
+            f"{each.mass:.1f}",
+        ))  # fmt: skip
+    return PrintedTable("Stirrup schedule", columns, tuple(rows))
+
+
+def _times(count: int) -> str:
+    return f"{count} × " if count > 1 else ""
+
+
+def _spacing(zone: StirrupZone) -> str:
+    return f"{zone.spacing:.0f}" if zone.number > 1 else DASH
+
+
+def _outside(shape: BentShape) -> str:
+    """Width by height of a stirrup; the height of a single leg."""
+    sizes = dict(shape.legs)
+    match shape.form:
+        case "open stirrup":
+            return f"{sizes['C']:.0f} × {sizes['B']:.0f}"
+        case "closed stirrup":
+            return f"{sizes['B']:.0f} × {sizes['A']:.0f}"
+        case "single leg":
+            return f"{sizes['B']:.0f}"
+    return f"{sizes['A']:.0f}"
+
+
+def quantity_table(amounts: Quantities) -> PrintedTable:
+    """Return concrete, formwork and steel with their totals."""
+    rows = [
+        ("Concrete, stem below the slab between faces", f"{amounts.stem:.2f}", "m³"),
+        ("Concrete, stem over the supports", f"{amounts.over_supports:.2f}", "m³"),
+        ("Concrete, slab over the web", f"{amounts.slab_over_web:.2f}", "m³"),
+        ("Concrete of the beam", f"{amounts.concrete:.2f}", "m³"),
+        ("Slab in the effective overhangs (not of the beam)",
+         f"{amounts.slab_overhangs:.2f}", "m³"),
+        ("Formwork, soffit", f"{amounts.soffit:.1f}", "m²"),
+        ("Formwork, sides", f"{amounts.sides:.1f}", "m²"),
+        ("Formwork, free ends", f"{amounts.ends:.1f}", "m²"),
+        ("Formwork", f"{amounts.formwork:.1f}", "m²"),
+        *((f"Steel {size}", f"{mass:.1f}", "kg") for size, mass in amounts.steel.items()),
+        ("Steel", f"{amounts.mass:.1f}", "kg"),
+        ("Steel in the concrete of the beam", f"{amounts.density:.0f}", "kg/m³"),
+    ]  # fmt: skip
+    return PrintedTable("Quantities", ("Quantity", "Amount", "Unit"), tuple(rows))
