@@ -59,7 +59,14 @@ _OUTSIDE = {"f_c": " (A23.3, 8.6.1.1)"}
 
 def read_input(name: str, given: QuantityInput) -> Typed:
     """Read one quantity of :data:`RANGES`; raises :class:`UserError` that names the input."""
-    allowed = RANGES[name]
+    return read_in_range(name, given, RANGES[name], _OUTSIDE.get(name, ""))
+
+
+def read_in_range(name: str, given: QuantityInput, allowed: Range, why: str = "") -> Typed:
+    """Read one quantity that must lie in a range; raises :class:`UserError`.
+
+    ``name`` is what the input is called, ``why`` says where the range comes from.
+    """
     if given is None:
         sample = f"{_plain(allowed.high / 4)} {allowed.unit}"
         raise UserError(f"{name}: is missing; write for example '{sample}'")
@@ -75,8 +82,7 @@ def read_input(name: str, given: QuantityInput) -> Typed:
     if not low <= value <= high:
         raise UserError(
             f"{name}: {echo(given)} is outside {_plain(allowed.low)} to {_plain(allowed.high)} "
-            f"{allowed.unit}{_OUTSIDE.get(name, ', the range of the method')}; "
-            "write a value inside it"
+            f"{allowed.unit}{why or ', the range of the method'}; write a value inside it"
         )
     return typed
 
@@ -196,7 +202,7 @@ def read_floor_beam(
         "grade": take("grade", row_of, GRADES),
         "use": take("use", _use_inside),
         "exposure": take("exposure", row_of, EXPOSURES),
-        "fire_rating": take("fire_rating", _fire_rating),
+        "fire_rating": take("fire_rating", read_fire_rating),
         "fire_aggregate": take("fire_aggregate", one_of, tuple(FIRE_SLAB.columns)),
         "stirrup": take("stirrup", row_of, STIRRUP_BENDS),
         "bottom_bars": reader.take_if_given("bottom_bars", read_bars),
@@ -206,9 +212,9 @@ def read_floor_beam(
         },
         "ends": take("ends", one_of, ENDS),
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
-        "waive_minimum_at_ends": take("waive_minimum_at_ends", _yes_or_no),
+        "waive_minimum_at_ends": take("waive_minimum_at_ends", yes_or_no),
     }  # fmt: skip
-    take("web_openings", _no_openings)
+    take("web_openings", no_openings)
     check_density(fields, given, reader.faults)
     _check_flange(fields, given, reader.faults)
     reader.smaller("h_f", "h", fields)
@@ -217,7 +223,8 @@ def read_floor_beam(
     return FloorBeamInputs(**fields), pair
 
 
-def _fire_rating(name: str, given: QuantityInput) -> str:
+def read_fire_rating(name: str, given: QuantityInput) -> str:
+    """Return the row of the fire tables for a rating."""
     hours = read_input(name, given).value
     for row in FIRE_COVER.rows:
         if abs(float(row.split()[0]) - hours) < 1e-9:  # noqa: PLR2004 - 45 min is 0.75 h
@@ -237,13 +244,15 @@ def _use_inside(name: str, given: object) -> str:
     return row_of(name, given, USES)
 
 
-def _yes_or_no(name: str, given: object) -> bool:
+def yes_or_no(name: str, given: object) -> bool:
+    """Return a choice that must be True or False."""
     if not isinstance(given, bool):
         raise UserError(f"{name}: {echo(given)} is not a choice; write True or False")
     return given
 
 
-def _no_openings(name: str, given: object) -> None:
+def no_openings(name: str, given: object) -> None:
+    """Refuse web openings."""
     if given not in (None, "none", "", 0, False):
         raise UserError(
             f"{name}: {echo(given)}: a beam with web openings is outside the method; write 'none' "

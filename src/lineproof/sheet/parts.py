@@ -126,6 +126,15 @@ class Parts:
             self._scope_of_part[entry.symbol] = entry
         return entry
 
+    def stand_for(self, entries: Mapping[str, Entry]) -> None:
+        """Let names stand for these entries inside the open part, before what stands elsewhere.
+
+        A beam of several spans has an ``h`` and a ``d`` at every place; the part of a place says
+        once which ones it means.
+        """
+        self._open_part()
+        self._scope_of_part.update(entries)
+
     def take_back(self, symbols: Iterable[str]) -> None:
         """Take entries out of the open part again: what does not close is not recorded."""
         part = self._open_part()

@@ -1,0 +1,228 @@
+"""The inputs of a beam of any number of spans: read and checked at the border."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from typing import Any
+
+from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
+from lineproof.beams.continuous.typed_beam import (
+    TypedLoad,
+    TypedSupport,
+    read_depths,
+    read_list,
+    read_loads,
+    read_spans,
+    read_supports,
+)
+from lineproof.beams.inputs import (
+    MINIMUM_RULES,
+    SHAPES,
+    InputReader,
+    Range,
+    Shape,
+    check_density,
+    no_openings,
+    one_of,
+    read_fire_rating,
+    read_in_range,
+    read_input,
+    row_of,
+    yes_or_no,
+)
+from lineproof.errors import FaultList, UserError
+from lineproof.quantity import QuantityInput, Typed, echo
+from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
+from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_SLAB
+from lineproof.standards.a23_3.deflection import LIMITS
+from lineproof.standards.a23_3.materials import DENSITY_FACTORS
+from lineproof.standards.codes import CodePair
+from lineproof.standards.nbc.loads import USES
+
+METHODS = ("general", "simplified")
+AREA = Range("kPa", 0, 100, zero=True)
+SHARE = Range("", 0, 1, zero=True)
+DEEPEST = 2.0
+"""Clear span over depth below which a beam is deep (10.7)."""
+STORED = ("storage area", "equipment room", "library stack room")
+"""Uses whose companion live load is larger (NBC 4.1.3.2)."""
+
+
+@dataclass(frozen=True)
+class ContinuousInputs:
+    """Checked inputs of a beam of any number of spans; lists hold one item a span or support."""
+
+    shape: Shape
+    spans: tuple[Typed, ...]
+    depths: tuple[Typed, ...]
+    supports: tuple[TypedSupport, ...]
+    spacing: Typed
+    tributary_width: Typed | None
+    b_w: Typed
+    h_f: Typed | None
+    f_c: Typed
+    gamma_c: Typed
+    density: str
+    grade: str
+    superimposed: Typed
+    partitions: Typed | None
+    floor_weight: Typed | None
+    use: str
+    live_load: Typed | None
+    snow: Typed | None
+    reduce_live_load: bool
+    loads: tuple[TypedLoad, ...]
+    construction_load: Typed | None
+    exposure: str
+    cover: Typed
+    aggregate: Typed
+    fire_rating: str
+    fire_aggregate: str
+    stirrup: str
+    shear_method: str
+    bottom_bars: tuple[BarLayers | None, ...]
+    top_bars: tuple[BarLayers | None, ...]
+    minimum_rule: str
+    carries: str
+    sustained: Typed | None
+
+    @property
+    def slab(self) -> bool:
+        """Whether the beam has a flange."""
+        return self.h_f is not None
+
+    @property
+    def live_kind(self) -> str:
+        """The load type of the live load on the floor."""
+        return "L_st" if self.use in STORED else "L"
+
+
+def read_inputs(
+    given: Mapping[str, Any], project: Mapping[str, Any]
+) -> tuple[ContinuousInputs, CodePair]:
+    """Read and check all inputs and the code pair; raises :class:`UserError` with every fault."""
+    reader = InputReader(given)
+    take, some = reader.take, reader.take_if_given
+    pair = reader.code_pair(project)
+    spans = take("spans", read_spans) or ()
+    fields: dict[str, Any] = {
+        "shape": take("shape", one_of, SHAPES),
+        "spans": spans,
+        **{name: take(name, read_input)
+           for name in ("spacing", "b_w", "f_c", "gamma_c", "superimposed", "cover", "aggregate")},
+        **{name: some(name, read_input)
+           for name in ("h_f", "live_load", "tributary_width", "floor_weight")},
+        **{name: some(name, read_in_range, AREA)
+           for name in ("partitions", "snow", "construction_load")},
+        "sustained": some("sustained", read_in_range, SHARE),
+        "density": take("density", row_of, DENSITY_FACTORS),
+        "grade": take("grade", row_of, GRADES),
+        "use": take("use", row_of, USES),
+        "reduce_live_load": take("reduce_live_load", yes_or_no),
+        "exposure": take("exposure", row_of, EXPOSURES),
+        "fire_rating": take("fire_rating", read_fire_rating),
+        "fire_aggregate": take("fire_aggregate", one_of, tuple(FIRE_SLAB.columns)),
+        "stirrup": take("stirrup", row_of, STIRRUP_BENDS),
+        "shear_method": take("shear_method", one_of, METHODS),
+        "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
+        "carries": take("carries", row_of, LIMITS),
+    }  # fmt: skip
+    take("web_openings", no_openings)
+    if spans:
+        count = len(spans)
+        fields |= {
+            "depths": take("h", read_depths, count),
+            "supports": take("supports", read_supports, given["columns"], count),
+            "loads": take("loads", read_loads, spans),
+            "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
+            "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),
+        }
+    check_density(fields, given, reader.faults)
+    _check_slab(fields, given, reader.faults)
+    if not reader.faults.faults:
+        _check_proportions(fields, reader.faults)
+    reader.faults.raise_if_any()
+    return ContinuousInputs(**fields), pair
+
+
+def _read_bar_list(
+    name: str, given: object, count: int, each: str, read: Any
+) -> tuple[BarLayers | None, ...]:
+    """Read bars by span or support; None, or None in the list, leaves them open."""
+    if given is None:
+        return (None,) * count
+    rows = [given] * count if isinstance(given, str) else read_list(name, given)
+    faults = FaultList()
+    if len(rows) != count:
+        faults.add(f"{name}: {len(rows)} given; write {count}, one a {each}, or None for all")
+    made: list[BarLayers | None] = []
+    for number, row in enumerate(rows, start=1):
+        try:
+            made.append(None if row is None else read(f"{name}, {each} {number}", row))
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+    return tuple(made)
+
+
+def _check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    shape, h_f, cover = fields["shape"], fields["h_f"], fields["cover"]
+    if shape in ("T", "L") and given["h_f"] is None:
+        faults.add(f"h_f: a beam of shape {shape!r} needs its slab; write '140 mm'")
+    if shape == "rectangular" and given["h_f"] is not None:
+        faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
+    if (shape == "rectangular") == (given["floor_weight"] is None):
+        faults.add(
+            "floor_weight: a rectangular beam needs the weight of the floor it carries; write "
+            "'3.4 kPa', or '0 kPa' if it carries none"
+            if shape == "rectangular"
+            else "floor_weight: the slab of a T or an L is counted from h_f; write None"
+        )
+    if shape == "L" and given["tributary_width"] is None:
+        faults.add("tributary_width: an edge beam needs it; write for example '1.7 m'")
+    if h_f is not None and cover is not None and h_f.value <= cover.value:
+        faults.add(
+            f"h_f: {echo(given['h_f'])} is not thicker than its cover of {echo(given['cover'])}; "
+            "write a thicker slab"
+        )
+    spacing, b_w = fields["spacing"], fields["b_w"]
+    if shape != "rectangular" and None not in (spacing, b_w) and spacing.value <= b_w.value:
+        faults.add(
+            f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
+            "write the distance between the centres of the beams"
+        )
+
+
+def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
+    """Refuse slabs thicker than the beam, supports that meet, and deep beams."""
+    supports: tuple[TypedSupport, ...] = fields["supports"]
+    h_f: Typed | None = fields["h_f"]
+    halves = [0.0 if s.width is None else s.width.value / 2 for s in supports]
+    for number, (length, depth) in enumerate(
+        zip(fields["spans"], fields["depths"], strict=True), start=1
+    ):
+        if h_f is not None and h_f.value >= depth.value:
+            faults.add(
+                f"h_f: {h_f.text} is not less than h of {depth.text} in span {number}; write a "
+                "thinner slab or a deeper beam"
+            )
+        clear = length.value - halves[number - 1] - halves[number]
+        if clear <= 0:
+            faults.add(
+                f"supports: {number} and {number + 1} leave nothing of span {number} of "
+                f"{length.text}; write narrower supports or a longer span"
+            )
+        elif "free" not in (supports[number - 1].kind, supports[number].kind):
+            _check_depth(number, clear, depth, faults)
+
+
+def _check_depth(number: int, clear: float, depth: Typed, faults: FaultList) -> None:
+    if clear < DEEPEST * depth.value:
+        faults.add(
+            f"span {number}: its clear length of {clear / 1000:g} m is less than twice h of "
+            f"{depth.text}: a deep beam is outside the method; use strut-and-tie (A23.3, 10.7)"
+        )
+
+
+QuantityOrList = QuantityInput | list[QuantityInput]
