@@ -6,6 +6,7 @@ from .examples import Given
 
 C: Given = {"phi_c": 0.65, "f_c": 35, "lambda_": 1, "b_w": 350, "d_v": 481.5}
 S: Given = {"phi_s": 0.85, "f_y": 400}
+STIFF: Given = {"l": 8, "E_c": 25000, "I_crm": 3e9, "I_gw": 5e9}
 
 EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "reduction.LARGE_ENOUGH": ({"A_L": 81, "A_Lmin": 80}, {"A_L": 20, "A_Lmin": 20}),
@@ -81,6 +82,22 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "deflection.ATTACHED_SMALL": (
         {"delta_at": 12.9, "delta_max": 15},
         {"delta_at": 15.1, "delta_max": 15},
+    ),
+    "deflection_stages.UNCRACKED": ({"M_a": 37, "M_crd": 37.3}, {"M_a": 38, "M_crd": 37.3}),
+    "deflection_stages.UNCRACKED_TOP": ({"M_a": 37, "M_crdn": 37.3}, {"M_a": 38, "M_crdn": 37.3}),
+    # 8000^2*100e6/(4*25000*2e9) = 32 mm
+    "deflection_stages.BOUND_SIMPLE": (
+        {"delta_k": 31, "l": 8, "M_m": 100, "E_c": 25000, "I_crm": 2e9, "I_g": 5e9},
+        {"delta_k": 33, "l": 8, "M_m": 100, "E_c": 25000, "I_crm": 2e9, "I_g": 5e9},
+    ),
+    # 8000^2*(60 + 40)e6/(4*25000*2e9) = 32 mm
+    "deflection_stages.BOUND_ONE_END": (
+        {"delta_k": 31, "M_m": 60, "M_h": 40, "I_cre": 2e9, **STIFF},
+        {"delta_k": 33, "M_m": 60, "M_h": 40, "I_cre": 2e9, **STIFF},
+    ),
+    "deflection_stages.BOUND_BOTH_ENDS": (
+        {"delta_k": 31, "M_m": 40, "M_h1": 40, "M_h2": 20, "I_cr1": 2e9, "I_cr2": 4e9, **STIFF},
+        {"delta_k": 33, "M_m": 40, "M_h1": 40, "M_h2": 20, "I_cr1": 2e9, "I_cr2": 4e9, **STIFF},
     ),
     "development.TOP_BAR": ({"h_u": 301}, {"h_u": 300}),
     "development.COVERED": ({"d_b": 25.2, "c_b1": 51.3}, {"d_b": 25.2, "c_b1": 20}),

@@ -220,4 +220,83 @@ DEFLECTION = (
     ),
     W("deflection.LARGEST", {"l_n": 7.2, "k_D": 480}, "7200/480 = 15"),
 )
-WORKED_SERVICE = (*LOADS, *ANALYSIS, *DEFLECTION)
+# Stages. Point loads: 40 kN at 2 m on 8 m: simple span, P a (3 l^2 - 4 a^2)/48
+# = 40*2*(192 - 16)/48 = 293.333; 5 l^2/48 (P a/2 + M_P) = 6.66667*(40 + 4) = 293.333
+STAGES = (
+    W(
+        "deflection_stages.STAGE_SUSTAINED",
+        {"M_sD": 80, "r_Ls": 0.5, "M_sL": 60},
+        "80 + 0.5*60 = 110",
+    ),
+    W("deflection_stages.STAGE_ALL", {"M_sD": 80, "M_sL": 60}, "80 + 60 = 140"),
+    W("deflection_stages.LARGEST_SO_FAR", {"M_s": 80, "M_ae": 95}, "max(80, 95) = 95.0"),
+    W(
+        "deflection_stages.CRACKING_WEB",
+        {"f_rd": 1.774824, "b_w": 350, "h": 600},
+        "1.774824*350*600**2/6/1e6 = 37.27",
+        CHECK_11,
+    ),
+    W("deflection_stages.GROSS", {"I_g": 6.3e9}, "6.3e9 = 6300e6"),
+    # check no. 11b from the moment: 122.5 kN.m
+    W(
+        "deflection_stages.SIMPLE_SPAN",
+        {"l": 7, "E_c": 26622, "I_e": 2677e6, "M_m": 122.5},
+        "5*7000**2/(48*26622*2677e6)*122.5e6 = 8.77",
+        CHECK_11 + "b",
+    ),
+    # propped cantilever, w 16, l 6: M at midspan w l^2/16 = 36, at the root w l^2/8 = 72;
+    # w l^4/(192 E I) = 16*1296e12/(192*25000*1e9) = 4.32
+    W(
+        "deflection_stages.ONE_END_SPAN",
+        {"l": 6, "E_c": 25000, "I_ea": 1e9, "M_m": 36, "M_h": 72},
+        "5*6000**2/(48*25000*1e9)*28.8e6 = 16*6000**4/(192*25000*1e9) = 4.32",
+    ),
+    # w 20, l 2: M = 40; w l^4/(8 E I) = 1.6
+    W(
+        "deflection_stages.CANTILEVER_BENDING",
+        {"M_h": 40, "l": 2, "E_c": 25000, "I_e": 1e9},
+        "40e6*2000**2/(4*25000*1e9) = 20*2000**4/(8*25000*1e9) = 1.6",
+    ),
+    # 100 at the root, 0 at the far end, 30 at midspan: uniform load with w l^2/8 = 80;
+    # M l/(3 E I) - w l^3/(24 E I) = (100*6/3 - 80*6/3)/(E I) = 40/(E I), in kN and m
+    W(
+        "deflection_stages.ROOT_ROTATION",
+        {"l_bk": 6, "M_hb": 100, "M_mb": 30, "E_c": 25000, "I_bk": 1e9},
+        "6000*40e6/(6*25000*1e9) = (100e6*6000/3 - 80e6*6000/3)/(25000*1e9) = 0.0016",
+    ),
+    W(
+        "deflection_stages.TIP",
+        {"delta_b": 1.6, "theta_r": 0.0032, "l": 2},
+        "1.6 + 0.0032*2000 = 8.0",
+    ),
+    W("deflection_stages.TIP_FIXED", {"delta_b": 1.6}, "1.6 = 1.6"),
+    W("deflection_stages.FROM_NEARER", {"x_P": 6, "l": 8}, "min(6, 8 - 6) = 2.0"),
+    W("deflection_stages.FROM_RIGHT", {"x_P": 0.5, "l": 2}, "2 - 0.5 = 1.5"),
+    W(
+        "deflection_stages.POINT_LOAD",
+        {"P_s": 40, "a_s": 2, "l": 8},
+        "0.1*40*2*(1 - 8*4/64) = 293.3333333/6.6666667 - 40 = 4.0",
+    ),
+    # at the tip: P l^3/3 = l^2/4 (P l + M_P), M_P = P l/3
+    W(
+        "deflection_stages.POINT_LOAD_CANTILEVER",
+        {"P_s": 15, "a_s": 2, "l": 2},
+        "15*2*(2 - 2/3 - 1) = 15*2/3 = 10.0",
+    ),
+    # 40 kN 6 m from the far end of 8 m, 2 m from the root: P b (l^2 - b^2)/(6 l)
+    # = 40*6*28/48 = 140 = 8/3*(40 + M_P)
+    W(
+        "deflection_stages.POINT_LOAD_BEHIND",
+        {"P_s": 40, "b_s": 6, "l_bk": 8, "a_s": 2},
+        "0.5*40*(6*(1 - 36/64) - 2) = 140*3/8 - 40 = 12.5",
+    ),
+    W("deflection_stages.WITH_LOCAL_LOADS", {"M_s": 140, "M_P": 4}, "140 + 4 = 144"),
+    W("deflection_stages.HALF_OF_PARTIAL", {"w_p": 10, "x_1": 1, "x_2": 3}, "10*2/2 = 10.0"),
+    W("deflection_stages.FIRST_POINT", {"x_1": 1, "x_2": 3}, "2 - 2/sqrt(12) = 1.42265"),
+    W("deflection_stages.SECOND_POINT", {"x_1": 1, "x_2": 3}, "2 + 2/sqrt(12) = 2.57735"),
+    W("deflection_stages.MIDDLE", {"l": 7.6}, "7.6/2 = 3.8"),
+    W("deflection_stages.LONG_TERM_PLAIN", {"S_t": 2}, "1 + 2 = 3.0"),
+    W("deflection_stages.LONG_TERM_ATTACHED_PLAIN", {"S_ta": 1}, "1 + 1 = 2.0"),
+    W("deflection_stages.CAMBER", {"zeta_s": 2.724, "delta_sus": 8}, "2.724*8 = 21.79"),
+)
+WORKED_SERVICE = (*LOADS, *ANALYSIS, *DEFLECTION, *STAGES)

@@ -17,6 +17,7 @@ from lineproof.standards.a23_3 import (
     crack_control,
     cutoff,
     deflection,
+    deflection_stages,
     development,
     flange,
     flexure,
@@ -44,7 +45,8 @@ NOTATION: Notation = A23_3 | NBC
 _MODULES = (
     materials, stress_block, flange, flexure, compression_steel, minimum, crack_control,
     capacity, bars, cover, strain, strain_closing, loads, combinations, reduction, analysis,
-    shear, shear_bars, torsion, interface, bearing, deflection, development, hooks, laps, cutoff,
+    shear, shear_bars, torsion, interface, bearing, deflection, deflection_stages,
+    development, hooks, laps, cutoff,
 )  # fmt: skip
 
 
