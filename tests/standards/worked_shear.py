@@ -24,6 +24,16 @@ SHEAR = (
         "max(0.9*535, 0.72*600) = max(481.5, 432) = 481.5",
         CHECK_8,
     ),
+    W("shear.CRITICAL_AT_D_V", {"b_sn": 450, "d_v": 481.5}, "(450/2 + 481.5)/1e3 = 0.7065"),
+    W("shear.CRITICAL_AT_FACE", {"b_sn": 450}, "450/2/1e3 = 0.225"),
+    W("shear.STIRRUP_LEGS", {"n_v": 2, "A_t": 100}, "2*100 = 200"),
+    # half a depth from the change the zone counts whole; at the change the mean of A_v/s
+    W(
+        "shear.BESIDE_CHANGE",
+        {"s": 150, "s_n": 300, "x_z": 120, "h": 600},
+        "1/(0.7/150 + 0.3/300) = 1/(0.0046667 + 0.001) = 176.5",
+    ),
+    W("shear.BESIDE_END", {"s": 150, "x_z": 120, "h": 600}, "150/(0.5 + 0.2) = 214.3"),
     W("shear.D_V", {"d": 460, "h": 600}, "max(0.9*460, 0.72*600) = max(414, 432) = 432.0"),
     W(
         "shear.V_C",
@@ -173,6 +183,7 @@ LONGITUDINAL = (
     ),
     W("shear_bars.AREA_TENSION_SIDE", {**S, "F_lt": 555.2}, "555200/340 = 1633"),
     W("shear_bars.AREA_END_SUPPORT", {**S, "F_le": 222.9}, "222900/340 = 656", CHECK_9 + "b"),
+    W("shear_bars.HANGER_LEGS", {"n_h": 3, "A_v": 200}, "3*200 = 600"),
     W("shear_bars.HANGERS", {**S, "R_f": 204}, "204000/(0.85*400) = 600"),
 )
 SIDES: dict[str, float] = {"b_w": 350, "h": 600}
@@ -194,6 +205,22 @@ TORSION = (
         "210000**2/1900*0.38*0.65*sqrt(35)/1e6 = 23.210526*0.247*5.91608 = 33.92",
         CHECK_10,
     ),
+    W("torsion.OVERHANG", {"b_o": 900, "h": 600, "h_f": 130}, "min(900, 600 - 130, 520) = 470"),
+    W(
+        "torsion.AREA_L",
+        {**SIDES, "b_pf": 470, "h_f": 130},
+        "350*600 + 470*130 = 210000 + 61100 = 271100",
+    ),
+    W("torsion.PERIMETER_L", {**SIDES, "b_pf": 470}, "2*(350 + 600 + 470) = 2840"),
+    W("torsion.AREA_T", {**SIDES, "b_pf": 470, "h_f": 130}, "210000 + 2*61100 = 332200"),
+    W("torsion.PERIMETER_T", {**SIDES, "b_pf": 470}, "2*(350 + 600 + 940) = 3780"),
+    W(
+        "torsion.T_CR_FLANGE",
+        {**C, "A_c": 210000, "p_c": 1900, "A_cf": 271100, "p_cf": 2840},
+        "271100**2/2840*0.38*0.65*sqrt(35)/1e6 = 25.878595*0.247*5.91608 = 37.82",
+    ),
+    W("torsion.TORQUE", {"t_f": 8, "l_n": 7.15, "x_n": 481.5}, "8*(3.575 - 0.4815) = 24.748"),
+    W("torsion.LEGS_LEFT", {"A_v": 200, "a_t": 0.258, "s": 150}, "200 - 2*0.258*150 = 122.6"),
     W("torsion.COMPATIBILITY", {"T_f": 28, "T_cr": 33.92}, "min(28, 0.67*33.92) = 22.73"),
     W("torsion.COMPATIBILITY", {"T_f": 20, "T_cr": 33.92}, "min(20, 22.73) = 20.00"),
     W(

@@ -8,11 +8,11 @@ from __future__ import annotations
 
 from functools import partial
 
-from lineproof.formula import FROM_MEMORY, criterion, formula
+from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, criterion, formula
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
-from lineproof.standards.references import SHEAR_2004, SHEAR_DERIVED
+from lineproof.standards.references import MECHANICS, SHEAR_2004, SHEAR_DERIVED
 
 _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
@@ -45,6 +45,18 @@ D_V = _formula(
     title="Effective shear depth",
     basis=FROM_MEMORY,
 )
+CRITICAL_AT_D_V = _formula(
+    "x_f = b_sn/2 + d_v",
+    clause="11.3.2",
+    title="Section considered, d_v from the face of the support",
+    basis=SHEAR_2004,
+)
+CRITICAL_AT_FACE = _formula(
+    "x_f = b_sn/2",
+    clause="11.3.2",
+    title="Section considered, at the face of the support",
+    basis=SHEAR_2004,
+)
 NEAR_POINT_LOADS = _criterion(
     "V_pl <= 0.3*lambda_*phi_c*sqrt(f_c)*b_w*d_v",
     clause="11.3.2",
@@ -54,6 +66,9 @@ NEAR_POINT_LOADS = _criterion(
     yes="The point loads near the support are small: the shear at d_v from the face governs.",
     no="The point loads near the support are large: the shear at the face governs.",
     key="near-point-loads",
+)
+STIRRUP_LEGS = _formula(
+    "A_v = n_v*A_t", clause="2.3", title="Area of the legs of a stirrup", basis=MECHANICS
 )
 V_C = _formula(
     "V_c = phi_c*lambda_*beta*min(1.0*sqrt(f_c), 8)*b_w*d_v",
@@ -186,6 +201,30 @@ SPACING = _criterion(
     key="stirrup-spacing",
 )
 
+CLEAR_SPACE = _criterion(
+    "75 <= s - d_bs",
+    unit="mm",
+    clause="detailing",
+    title="Clear space between the stirrups, for placing the concrete",
+    basis=COMMON_PRACTICE,
+    numbers={"75": "mm"},
+    yes="The stirrups leave room for placing the concrete.",
+    no="The stirrups leave TOO LITTLE room for placing the concrete.",
+    key="stirrup-clear-space",
+)
+BESIDE_CHANGE = _formula(
+    "s_x = 1/((0.5 + x_z/h)/s + (0.5 - x_z/h)/s_n)",
+    clause="11.3.7",
+    title="Spacing that counts, the stirrups changing over the depth h",
+    basis=SHEAR_2004,
+)
+BESIDE_END = _formula(
+    "s_x = s/(0.5 + x_z/h)",
+    clause="11.3.7",
+    title="Spacing that counts, the stirrups ending there",
+    basis=SHEAR_2004,
+)
+
 GRADE_FOR_SIMPLIFIED = _criterion(
     "f_y <= 400",
     clause="11.3.6.3",
@@ -309,13 +348,14 @@ THETA = _formula(
 )
 
 FORMULAS = (
-    D_V, V_C, V_S, V_R_MAX, V_R, V_R_PLAIN, A_V_MIN, SPACING_MINIMUM, SPACING_REQUIRED, S_MAX,
+    D_V, CRITICAL_AT_D_V, CRITICAL_AT_FACE, STIRRUP_LEGS, BESIDE_CHANGE, BESIDE_END,
+    V_C, V_S, V_R_MAX, V_R, V_R_PLAIN, A_V_MIN, SPACING_MINIMUM, SPACING_REQUIRED, S_MAX,
     S_MAX_HALVED, BETA_D_V, BETA_S_ZE, A_G, S_Z, S_Z_LAYERS, S_ZE, EPS_X, BETA_STIRRUPS,
     BETA_GENERAL, THETA,
 )  # fmt: skip
 CRITERIA = (
     NEAR_POINT_LOADS, STRENGTH, WEB_HOLDS, NEEDS_STIRRUPS, DEPTH_NEEDS_STIRRUPS, HAS_MINIMUM,
     CLOSER, SPACING, GRADE_FOR_SIMPLIFIED, CONCRETE_FOR_SIMPLIFIED, SHALLOW, SHALLOW_BELOW_SLAB,
-    LAYER_COUNTS, STRAIN_IN_RANGE,
+    LAYER_COUNTS, STRAIN_IN_RANGE, CLEAR_SPACE,
 )  # fmt: skip
 TABLES = (SIMPLIFIED, SPECIAL)

@@ -91,6 +91,12 @@ HANGERS = _formula(
     title="Hanger stirrups where a beam is carried by a beam, whole reaction",
     basis=MECHANICS,
 )
+HANGER_LEGS = _formula(
+    "A_h = n_h*A_v",
+    clause="11.2.12",
+    title="Area of the legs of the hanger stirrups",
+    basis=MECHANICS,
+)
 HANGERS_PROVIDED = _criterion(
     "A_hr <= A_h",
     clause="11.2.12",
@@ -101,6 +107,17 @@ HANGERS_PROVIDED = _criterion(
     key="hanger-stirrups",
 )
 
+HOOKS_SUFFICE = _criterion(
+    "d_bs <= 16",
+    clause="12.13.2",
+    title="Anchorage of the stirrups: a standard hook around a bar in each corner",
+    basis=FROM_MEMORY,
+    numbers={"16": "mm"},
+    yes="At most 15M: a standard hook around a bar in each corner anchors the stirrups.",
+    no="Thicker than 15M: a standard hook alone does NOT anchor the stirrups.",
+    key="stirrup-hooks",
+)
+
 FORMULAS = (
     TENSION_SIDE,
     TENSION_SIDE_CAPPED,
@@ -109,6 +126,7 @@ FORMULAS = (
     AREA_TENSION_SIDE,
     AREA_END_SUPPORT,
     HANGERS,
+    HANGER_LEGS,
 )
 CRITERIA = (
     TENSION_SIDE_HOLDS,
@@ -116,4 +134,5 @@ CRITERIA = (
     COMPRESSION_SIDE_HOLDS,
     END_SUPPORT_HOLDS,
     HANGERS_PROVIDED,
+    HOOKS_SUFFICE,
 )

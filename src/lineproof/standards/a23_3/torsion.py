@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from functools import partial
 
-from lineproof.formula import FROM_MEMORY, criterion, formula
+from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
 from lineproof.standards.references import MECHANICS, SHEAR_2004
@@ -42,6 +42,50 @@ T_CR = _formula(
     title="Torsion that cracks the section",
     basis=FROM_MEMORY,
     numbers={"0.38": "MPa^0.5"},
+)
+OVERHANG = _formula(
+    "b_pf = min(b_o, h - h_f, 4*h_f)",
+    unit="mm",
+    clause="2.3",
+    title="Width of the overhang that counts",
+    basis=COMMON_PRACTICE,
+)
+AREA_L = _formula(
+    "A_cf = b_w*h + b_pf*h_f",
+    clause="2.3",
+    title="Area of the concrete with its overhang",
+    basis=MECHANICS,
+)
+PERIMETER_L = _formula(
+    "p_cf = 2*(b_w + h + b_pf)",
+    clause="2.3",
+    title="Perimeter of the concrete with its overhang",
+    basis=MECHANICS,
+)
+AREA_T = _formula(
+    "A_cf = b_w*h + 2*b_pf*h_f",
+    clause="2.3",
+    title="Area of the concrete with its overhangs",
+    basis=MECHANICS,
+)
+PERIMETER_T = _formula(
+    "p_cf = 2*(b_w + h + 2*b_pf)",
+    clause="2.3",
+    title="Perimeter of the concrete with its overhangs",
+    basis=MECHANICS,
+)
+T_CR_FLANGE = _formula(
+    "T_crf = max(A_c**2/p_c, A_cf**2/p_cf)*0.38*lambda_*phi_c*sqrt(f_c)",
+    clause="11.2.9.1",
+    title="Torsion that cracks the section, overhang counted",
+    basis=FROM_MEMORY,
+    numbers={"0.38": "MPa^0.5"},
+)
+TORQUE = _formula(
+    "T_f = t_f*(l_n/2 - x_n)",
+    clause="statics",
+    title="Torsion at the section, the ends held at the faces of the supports",
+    basis=MECHANICS,
 )
 COUNTS = _criterion(
     "T_f > 0.25*T_cr",
@@ -89,6 +133,12 @@ LEGS = _formula(
     "a_vt = a_v + 2*a_t",
     clause="11.3.10.3",
     title="Stirrup legs for shear and torsion, two of them closed around the section",
+    basis=FROM_MEMORY,
+)
+LEGS_LEFT = _formula(
+    "A_vr = A_v - 2*a_t*s",
+    clause="11.3.10.3",
+    title="Stirrup legs that torsion leaves for shear",
     basis=FROM_MEMORY,
 )
 LEGS_PROVIDED = _criterion(
@@ -159,6 +209,7 @@ CORNER_BARS = _criterion(
 FORMULAS = (
     AREA_RECTANGLE, PERIMETER_RECTANGLE, AREA_OF_STIRRUP, PERIMETER_OF_STIRRUP, A_O, T_CR,
     COMPATIBILITY, T_R, LEG_FOR_TORSION, LEGS_FOR_SHEAR, LEGS, SHEAR_IN_STRAIN, EPS_X,
-    SHEAR_IN_BARS, TENSION_SIDE, COMPRESSION_SIDE, END_SUPPORT,
+    SHEAR_IN_BARS, TENSION_SIDE, COMPRESSION_SIDE, END_SUPPORT, OVERHANG, AREA_L, PERIMETER_L,
+    AREA_T, PERIMETER_T, T_CR_FLANGE, TORQUE, LEGS_LEFT,
 )  # fmt: skip
 CRITERIA = (COUNTS, STRENGTH, LEGS_PROVIDED, SECTION, CORNER_BARS)
