@@ -1,7 +1,8 @@
-"""Figures as plain shapes with a paper scale, their plain data and their SVG."""
+"""Figures as plain shapes with a paper scale, their plain data, their SVG and DXF."""
 
 from __future__ import annotations
 
+from lineproof.drawing.dxf import dxf
 from lineproof.drawing.interchange import from_json, to_json
 from lineproof.drawing.shapes import (
     LIGHT,
@@ -44,6 +45,7 @@ __all__ = [
     "Runs",
     "Shape",
     "Text",
+    "dxf",
     "from_json",
     "svg",
     "symbol",

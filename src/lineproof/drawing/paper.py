@@ -31,6 +31,9 @@ TEXT_GAP = 1.0
 FIT_MARGIN = 1.2
 BESIDE_GAP = 1.6
 BACKING_MARGIN = 0.25
+DASHES = {"dashed": (2.0, 1.2), "long": (5.0, 1.4), "dotted": (0.45, 1.0),
+          "chain": (5.0, 1.0, 0.9, 1.0)}  # fmt: skip
+"""Lengths drawn and left out in turn, mm on paper."""
 
 PaperShape = Line | Polyline | Circle | Arc
 
@@ -51,6 +54,12 @@ class Placed:
         high = CAP_HEIGHT * self.text.size
         local = ((left, low), (left + self.width, low), (left + self.width, high), (left, high))
         return tuple(_turned(self.at, point, self.text.rotation) for point in local)
+
+    @property
+    def middle(self) -> Point:
+        """The middle of the capitals, halfway along the text, mm on paper."""
+        aside = {"start": self.width / 2, "middle": 0.0, "end": -self.width / 2}[self.text.anchor]
+        return _turned(self.at, (aside, CAP_HEIGHT * self.text.size / 2), self.text.rotation)
 
 
 def lower(figure: Figure) -> tuple[list[PaperShape], list[Placed]]:

@@ -7,11 +7,10 @@ from html import escape
 
 from lineproof.drawing.interchange import from_json, to_json
 from lineproof.drawing.metrics import SUB_DROP, SUB_SIZE, SUP_RISE, printable
-from lineproof.drawing.paper import BACKING_MARGIN, PaperShape, Placed, lower
+from lineproof.drawing.paper import BACKING_MARGIN, DASHES, PaperShape, Placed, lower
 from lineproof.drawing.shapes import Arc, Circle, Figure, Line, Point, Polyline, Runs
 
 FONT_FAMILY = "Libertinus Serif"
-_DASHES = {"dashed": "2 1.2", "long": "5 1.4", "dotted": "0.45 1", "chain": "5 1 0.9 1"}
 _SHIFTS = {"sub": SUB_DROP, "sup": -SUP_RISE}
 _STYLES = {"italic": ' font-style="italic"', "bold": ' font-weight="bold"'}
 
@@ -81,7 +80,8 @@ _NO_STROKE = ' stroke="none"'
 def _stroke(shape: Line | Polyline | Arc) -> str:
     if not shape.weight:
         return _NO_STROKE
-    dash = f' stroke-dasharray="{_DASHES[shape.dash]}"' if shape.dash != "solid" else ""
+    lengths = " ".join(map(_number, DASHES.get(shape.dash, ())))
+    dash = f' stroke-dasharray="{lengths}"' if lengths else ""
     return f' stroke-width="{_number(shape.weight)}"{dash}'
 
 
