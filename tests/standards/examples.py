@@ -142,5 +142,6 @@ EXAMPLES: dict[str, tuple[Given, Given]] = {
     "strain.PROVED": ({"M_l": 327.5, "M_r": 327.4}, {"M_l": 327.8, "M_r": 327.4}),
     # check 5a: 734.1; 0.7/734.1 = 0.095 %; 0.8/734.1 = 0.109 %
     "strain.PROVED_BALANCED": ({"M_l": 734.8, "M_rb": 734.1}, {"M_l": 734.9, "M_rb": 734.1}),
+    "loads.PARTITIONS_ENOUGH": ({"q_ptmin": 1.0, "q_pt": 1.0}, {"q_ptmin": 1.0, "q_pt": 0.9}),
     "loads.LIVE_IS_ENOUGH": ({"q_Lmin": 4.8, "q_L": 5}, {"q_Lmin": 4.8, "q_L": 3}),
 }

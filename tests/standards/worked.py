@@ -175,6 +175,9 @@ LOADS = (
     ),
     W("loads.BEAM", {"gamma_w": 24, "b_w": 380, "h": 620}, "24*0.38*0.62 = 5.6544"),
     W("loads.SUPERIMPOSED", {"q_SD": 1.8, "b_tr": 3.1}, "1.8*3.1 = 5.58"),
+    W("loads.PARTITIONS", {"q_pt": 1.0, "b_tr": 3.1}, "1.0*3.1 = 3.1"),
+    W("loads.SNOW", {"q_S": 1.6, "b_tr": 2.5}, "1.6*2.5 = 4.0"),
+    W("loads.CONSTRUCTION", {"q_cn": 2.4, "b_tr": 3.1}, "2.4*3.1 = 7.44"),
     W(
         "loads.DEAD_WITH_SLAB",
         {"w_sl": 10.416, "w_wb": 4.3776, "w_SD": 5.58},

@@ -98,6 +98,7 @@ _KINDS: dict[str, tuple[str, dict[str, str]]] = {
             "ksf": "kip/ft**2",
         },
     ),
+    "bending stiffness": ("N.mm2", {"N.mm2": "N*mm**2", "kN.m2": "kN*m**2"}),
     "unit weight": ("N/mm3", {"N/mm3": "N/mm**3", "kN/m3": "kN/m**3", "pcf": "lbf/ft**3"}),
     "density": ("kg/m3", {"kg/m3": "kg/m**3", "lb/ft3": "lb/ft**3"}),
     "mass": ("kg", {"kg": "kg", "lb": "lb"}),
@@ -130,7 +131,7 @@ _EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "forc
 METRE_SYSTEM = {
     "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
     "moment": "kN.m", "load per length": "kN/m", "stress or pressure": "kPa",
-    "unit weight": "kN/m3", "one over length": "1/m", "area per length": "mm2/mm",
+    "unit weight": "kN/m3", "bending stiffness": "kN.m2", "one over length": "1/m", "area per length": "mm2/mm",
 }  # fmt: skip
 """Units in which a formula of loads is substituted: kN and m instead of N and mm."""
 

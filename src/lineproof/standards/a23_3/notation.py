@@ -326,6 +326,20 @@ _ROWS = (
     ("l_lim", "ℓ", "lim", "", "largest development length of the bars", "mm"),
     ("A_pi", "A", "pi", "", "area of top bars past the point of inflection", "mm2"),
     ("l_pi", "ℓ", "pi", "", "least extension past the point of inflection", "mm"),
+    ("x_t", "x", "t", "", "point of no further need, from the near support axis", "mm"),
+    ("x_e", "x", "e", "", "end of the bars, from the near support axis", "mm"),
+    ("x_co", "x", "co", "", "end of the continuing bars, from the near support axis", "mm"),
+    ("x_st", "x", "", "", "station, from the near support axis", "mm"),
+    ("l_cn", "ℓ", "cn", "", "length of the continuing bars past that point, provided", "mm"),
+    ("l_lp", "ℓ", "lp", "", "length of the lap, provided", "mm"),
+    ("s_cl", "s", "cl", "", "clear distance between bars at the lap", "mm"),
+    ("b_sp", "b", "sp", "", "width of the support along the beam", "mm"),
+    ("b_col", "b", "col", "", "width of the support across the beam", "mm"),
+    ("c_end", "c", "end", "", "cover at the end of the bars", "mm"),
+    ("c_top", "c", "top", "", "cover of the hooked bars at the top or bottom face", "mm"),
+    ("A_bs", "A", "bs", "", "area of one stirrup leg", "mm2"),
+    ("A_sd1", "A", "sd1", "", "area of bars counted as far as developed, first group", "mm2"),
+    ("A_sd2", "A", "sd2", "", "area of bars counted as far as developed, second group", "mm2"),
 )  # fmt: skip
 
 NOTATION = Notation(Symbol(*row) for row in _ROWS)

@@ -59,6 +59,16 @@ UNIT_WEIGHT = LookupTable(
     basis=FROM_MEMORY,
 )
 
+PARTITION_ALLOWANCE = LookupTable(
+    "Least allowance for partitions",
+    "allowance for partitions",
+    {"q_ptmin": "kPa"},
+    {"partitions not drawn": {"q_ptmin": "1.0"}},
+    "NBC Division B, 4.1.4.1",
+    clause="NBC 4.1.4.1",
+    basis=NBC_LOADS,
+)
+
 TRIBUTARY = _formula(
     "b_tr = s_b",
     clause="geometry",
@@ -84,6 +94,33 @@ SUPERIMPOSED = _formula(
     "w_SD = q_SD*b_tr",
     clause="NBC 4.1.4.1",
     title="Superimposed dead load on the tributary width",
+    basis=MECHANICS,
+)
+PARTITIONS = _formula(
+    "w_pt = q_pt*b_tr",
+    clause="NBC 4.1.4.1",
+    title="Partitions, a dead load, on the tributary width",
+    basis=NBC_LOADS,
+)
+PARTITIONS_ENOUGH = _criterion(
+    "q_ptmin <= q_pt",
+    clause="NBC 4.1.4.1",
+    title="Allowance for partitions",
+    basis=NBC_LOADS,
+    yes="The allowance for partitions is not below the least one.",
+    no="The allowance for partitions is BELOW the least one.",
+    key="partitions",
+)
+SNOW = _formula(
+    "w_S = q_S*b_tr",
+    clause="NBC 4.1.6.2",
+    title="Snow load on the tributary width",
+    basis=MECHANICS,
+)
+CONSTRUCTION = _formula(
+    "w_cn = q_cn*b_tr",
+    clause="NBC 4.1.4.1",
+    title="Load of the construction stage on the tributary width, beside the weight of the floor",
     basis=MECHANICS,
 )
 DEAD_WITH_SLAB = _formula(
@@ -150,6 +187,9 @@ FORMULAS = (
     WEB,
     BEAM,
     SUPERIMPOSED,
+    PARTITIONS,
+    SNOW,
+    CONSTRUCTION,
     DEAD_WITH_SLAB,
     FLOOR,
     DEAD_BEAM,
@@ -161,5 +201,5 @@ FORMULAS = (
     MOMENT_END_GIRDER,
     MOMENT_END_COLUMN,
 )
-CRITERIA = (LIVE_IS_ENOUGH,)
-TABLES = (USES, UNIT_WEIGHT)
+CRITERIA = (LIVE_IS_ENOUGH, PARTITIONS_ENOUGH)
+TABLES = (USES, UNIT_WEIGHT, PARTITION_ALLOWANCE)

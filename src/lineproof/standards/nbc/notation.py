@@ -7,6 +7,12 @@ from lineproof.formula import Notation, Symbol
 _ROWS = (
     ("gamma_w", "γ", "w", "", "unit weight of reinforced concrete", "kN/m3"),
     ("q_SD", "q", "SD", "", "superimposed dead load", "kPa"),
+    ("q_pt", "q", "pt", "", "allowance for partitions", "kPa"),
+    ("q_ptmin", "q", "pt,min", "", "least allowance for partitions", "kPa"),
+    ("w_pt", "w", "pt", "", "partitions on the tributary width", "kN/m"),
+    ("q_S", "S", "", "", "specified snow load", "kPa"),
+    ("q_cn", "q", "cn", "", "load of the construction stage", "kPa"),
+    ("w_cn", "w", "cn", "", "load of the construction stage on the tributary width", "kN/m"),
     ("q_fl", "q", "fl", "", "weight of the floor carried", "kPa"),
     ("w_fl", "w", "fl", "", "weight of the floor carried, on the tributary width", "kN/m"),
     ("q_L", "q", "L", "", "specified live load", "kPa"),
