@@ -112,6 +112,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
         {"l_dc": 444, "l_av": 400},
     ),
     "hooks.SIDE_COVERED": ({"c_side": 60}, {"c_side": 51}),
+    "hooks.FACE_COVERED": ({"c_top": 60}, {"c_top": 51.3}),
     "hooks.TAIL_COVERED": ({"c_tail": 50}, {"c_tail": 49}),
     # 3*25.2 = 75.6
     "hooks.TIED": ({"s_tie": 75, "d_b": 25.2}, {"s_tie": 76, "d_b": 25.2}),
@@ -120,8 +121,13 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "laps.EXCESS_FOR_A": ({"A_sr": 1000, "A_s": 2000}, {"A_sr": 1001, "A_s": 2000}),
     "laps.SHARE_FOR_A": ({"r_sp": 0.5}, {"r_sp": 1}),
     # 600/5 = 120; 1000/5 = 200 counts as 150
+    "laps.LONG_ENOUGH": ({"l_s": 874, "l_lp": 900}, {"l_s": 874, "l_lp": 850}),
+    "laps.ROOM": ({"s_min": 35.3, "s_cl": 48.9}, {"s_min": 35.3, "s_cl": 24}),
     "laps.CLOSE": ({"s_nc": 120, "l_s": 600}, {"s_nc": 151, "l_s": 1000}),
     # 2/3*324.5 = 216.3; 0.75*324.5 = 243.4
+    "cutoff.EXTENDED": ({"l_e": 687.7, "l_ext": 700}, {"l_e": 687.7, "l_ext": 650}),
+    "cutoff.CONTINUES": ({"l_co": 1302, "l_cn": 1400}, {"l_co": 1302, "l_cn": 1300}),
+    "cutoff.SUFFICES": ({"M_f": 172, "M_r": 172.8}, {"M_f": 173, "M_r": 172.8}),
     "cutoff.CUT_AT_LOW_SHEAR": ({"V_f": 216, "V_r": 324.5}, {"V_f": 217, "V_r": 324.5}),
     "cutoff.CUT_AT_DOUBLE_AREA": ({"A_sr": 500, "A_co": 1000}, {"A_sr": 501, "A_co": 1000}),
     "cutoff.CUT_AT_MODERATE_SHEAR": ({"V_f": 243, "V_r": 324.5}, {"V_f": 244, "V_r": 324.5}),

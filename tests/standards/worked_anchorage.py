@@ -15,6 +15,19 @@ CASE_H2 = "case H2: formula evaluation from memory, not a printed number"
 K = {"k_1": 1.0, "k_2": 1.0, "k_3": 1.0, "k_4": 1.0}
 BAR = {"f_y": 400, "f_c": 35, "d_b": 25.2}
 DEVELOPMENT = (
+    W(
+        "development.FRESH_BELOW",
+        {"h": 600, "c_c": 40, "d_bs": 11.3, "d_b": 25.2},
+        "600 - 40 - 11.3 - 25.2 = 523.5",
+    ),
+    W("development.CLEAR_OVERHANG", {"b_ot": 380, "n_o": 3, "d_b": 16}, "380/3 - 16 = 110.67"),
+    W(
+        "development.TO_SURFACE",
+        {"c_c": 40, "d_bs": 11.3, "d_b": 25.2},
+        "40 + 11.3 + 12.6 = 63.9",
+        CHECK_12,
+    ),
+    W("development.A_TR", {"n_v": 2, "A_bs": 100}, "2*100 = 200", CHECK_12),
     # (350 - 2 x 63.9)/3 = 74.067 c/c: 48.867 clear
     W("development.CENTRES", {"s_c": 48.867, "d_b": 25.2}, "48.867 + 25.2 = 74.067", CHECK_12),
     W(
@@ -86,6 +99,7 @@ DEVELOPMENT = (
         "1000*400/672 = 595.2",
     ),
     W("development.DEVELOPED_AREA", {"A_s": 1000, "l_av": 700, "l_d": 672}, "1000*1 = 1000.0"),
+    W("development.DEVELOPED_TOTAL", {"A_sd1": 1000, "A_sd2": 595.2}, "1000 + 595.2 = 1595.2"),
     W(
         "development.COMPRESSION_BASIC",
         BAR,
@@ -122,12 +136,23 @@ HOOKS = (
         {**FACTORS, "k_hc": 0.7, "l_hb": 425.96, "d_b": 25.2, "A_sr": 900, "A_s": 1000},
         "0.7*0.9*425.96 = 268.35",
     ),
+    # the base beam alone gives 51.3 mm of side cover, a column of 500 mm 75 mm more
+    W("hooks.SIDE_COVER", {"c_c": 40, "d_bs": 11.3}, "40 + 11.3 = 51.3", CHECK_12 + "b"),
+    W("hooks.FACE_COVER", {"c_c": 40, "d_bs": 11.3}, "40 + 11.3 = 51.3", CHECK_12 + "b"),
+    W(
+        "hooks.SIDE_COVER_COLUMN",
+        {"b_col": 500, "b_w": 350, "c_c": 40, "d_bs": 11.3},
+        "150/2 + 40 + 11.3 = 126.3",
+    ),
+    W("hooks.AVAILABLE", {"b_sp": 400, "c_end": 50}, "400 - 50 = 350.0"),
 )
 LAPS = (
     W("laps.CLASS_A", {"l_d0": 672.1}, "1.0*672.1 = 672.1"),
     W("laps.CLASS_B", {"l_d0": 672.1}, "1.3*672.1 = 874", CHECK_12),
     # 1.3 times the length before the least of 300 mm: 1.3 x 200, not 1.3 x 300
     W("laps.CLASS_B", {"l_d0": 200}, "max(1.3*200, 300) = 300"),
+    W("laps.CLEAR_CORNERS", {"s_c": 74.1, "d_b": 25.2}, "74.1 - 25.2 = 48.9"),
+    W("laps.CLEAR_PAIR", {"s_c": 197, "d_b": 25.2}, "197 - 50.4 = 146.6"),
     W("laps.COMPRESSION", {"f_y": 400, "d_b": 25.2}, "0.073*400*25.2 = 736", CHECK_12 + "b"),
     W("laps.COMPRESSION", {"f_y": 400, "d_b": 10}, "max(292, 300) = 300"),
     W("laps.COMPRESSION_STRONG", {"f_y": 500, "d_b": 25.2}, "(0.133*500 - 24)*25.2 = 1071.0"),
@@ -140,6 +165,13 @@ CUTOFF = (
     ),
     W("cutoff.EXTENSION_PLAIN", {"d": 535, "d_b": 25.2}, "max(535, 302.4) = 535"),
     W("cutoff.EXTENSION_PLAIN", {"d": 250, "d_b": 25.2}, "max(250, 12*25.2) = 302.4"),
+    W("cutoff.PAST_INWARD", {"x_t": 1900, "x_e": 1200}, "1900 - 1200 = 700.0"),
+    W("cutoff.PAST_OUTWARD", {"x_t": 1100, "x_e": 1800}, "1800 - 1100 = 700.0"),
+    W("cutoff.CONTINUING_INWARD", {"x_t": 1900, "x_co": 150}, "1900 - 150 = 1750.0"),
+    W("cutoff.CONTINUING_OUTWARD", {"x_t": 1100, "x_co": 2500}, "2500 - 1100 = 1400.0"),
+    # 150 mm past a face that lies 200 mm from the axis
+    W("cutoff.IN_SUPPORT", {"b_sp": 400, "x_e": 50}, "400/2 - 50 = 150.0"),
+    W("cutoff.PAST_CENTRE", {"b_sp": 400, "c_end": 50}, "400/2 - 50 = 150.0", CHECK_12 + "c"),
     W("cutoff.CONTINUING", {"l_d": 767, "d": 535, "d_b": 25.2}, "767 + 535 = 1302"),
     W("cutoff.PAST_INFLECTION", {"l_ext": 700, "d": 535, "d_b": 25.2}, "min(700, 535) = 535"),
     W("cutoff.PAST_INFLECTION", {"l_ext": 400, "d": 535, "d_b": 25.2}, "min(400, 535) = 400"),

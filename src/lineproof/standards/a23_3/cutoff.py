@@ -7,6 +7,7 @@ from functools import partial
 from lineproof.formula import FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
+from lineproof.standards.references import MECHANICS
 
 _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
@@ -28,6 +29,69 @@ CONTINUING = _formula(
     "l_co = l_d + max(d, 12*d_b)",
     clause="12.10.4",
     title="Length of continuing bars past that point",
+    basis=FROM_MEMORY,
+)
+PAST_INWARD = _formula(
+    "l_ext = x_t - x_e",
+    clause="geometry",
+    title="Extension of the bars towards the support",
+    basis=MECHANICS,
+)
+PAST_OUTWARD = _formula(
+    "l_ext = x_e - x_t",
+    clause="geometry",
+    title="Extension of the bars away from the support",
+    basis=MECHANICS,
+)
+CONTINUING_INWARD = _formula(
+    "l_cn = x_t - x_co",
+    clause="geometry",
+    title="Length of the continuing bars towards the support",
+    basis=MECHANICS,
+)
+CONTINUING_OUTWARD = _formula(
+    "l_cn = x_co - x_t",
+    clause="geometry",
+    title="Length of the continuing bars away from the support",
+    basis=MECHANICS,
+)
+EXTENDED = _criterion(
+    "l_e <= l_ext",
+    clause="12.10.3",
+    title="Extension past the point of no further need",
+    basis=FROM_MEMORY,
+    yes="The bars extend far enough past the point of no further need.",
+    no="The bars do NOT extend far enough past the point of no further need.",
+    key="cut-extension",
+)
+CONTINUES = _criterion(
+    "l_co <= l_cn",
+    clause="12.10.4",
+    title="Length of the continuing bars past that point",
+    basis=FROM_MEMORY,
+    yes="The continuing bars reach far enough.",
+    no="The continuing bars do NOT reach far enough.",
+    key="cut-continuing",
+)
+SUFFICES = _criterion(
+    "M_f <= M_r",
+    clause="12.10.3",
+    title="Moment that the continuing bars carry alone",
+    basis=MECHANICS,
+    yes="From here on the continuing bars carry the moment alone.",
+    no="The continuing bars do NOT carry the moment alone here.",
+    key="cut-point",
+)
+IN_SUPPORT = _formula(
+    "l_in = b_sp/2 - x_e",
+    clause="geometry",
+    title="Length of the bottom bars inside the support",
+    basis=MECHANICS,
+)
+PAST_CENTRE = _formula(
+    "l_a = b_sp/2 - c_end",
+    clause="12.11.3",
+    title="Embedment past the centre of the support",
     basis=FROM_MEMORY,
 )
 CUT_AT_LOW_SHEAR = _criterion(
@@ -154,11 +218,12 @@ LONG_PAST_INFLECTION = _criterion(
 )
 
 FORMULAS = (
-    EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INFLECTION, LIMIT, LIMIT_CONFINED,
+    EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD, PAST_OUTWARD, CONTINUING_INWARD,
+    CONTINUING_OUTWARD, IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION, LIMIT, LIMIT_CONFINED,
     LENGTH_PAST_INFLECTION,
 )  # fmt: skip
 CRITERIA = (
-    CUT_AT_LOW_SHEAR, CUT_AT_DOUBLE_AREA, CUT_AT_MODERATE_SHEAR, INTO_SIMPLE_SUPPORT,
-    INTO_CONTINUOUS_SUPPORT, LENGTH_IN_SUPPORT, ANCHORED_LATERAL, DEVELOPED_AT_ZERO_MOMENT,
-    TOP_PAST_INFLECTION, LONG_PAST_INFLECTION,
+    EXTENDED, CONTINUES, SUFFICES, CUT_AT_LOW_SHEAR, CUT_AT_DOUBLE_AREA, CUT_AT_MODERATE_SHEAR,
+    INTO_SIMPLE_SUPPORT, INTO_CONTINUOUS_SUPPORT, LENGTH_IN_SUPPORT, ANCHORED_LATERAL,
+    DEVELOPED_AT_ZERO_MOMENT, TOP_PAST_INFLECTION, LONG_PAST_INFLECTION,
 )  # fmt: skip

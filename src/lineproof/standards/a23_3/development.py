@@ -76,6 +76,30 @@ TOP_BAR = _criterion(
     no="Not more than 300 mm of fresh concrete is cast below the bars.",
     key="top-bars",
 )
+FRESH_BELOW = _formula(
+    "h_u = h - c_c - d_bs - d_b",
+    clause="12.2.4",
+    title="Depth of fresh concrete cast below the top bars",
+    basis=MECHANICS,
+)
+CLEAR_OVERHANG = _formula(
+    "s_c = b_ot/n_o - d_b",
+    clause="12.2.3",
+    title="Clear distance between the bars spread over the overhang",
+    basis=MECHANICS,
+)
+TO_SURFACE = _formula(
+    "d_cn = c_c + d_bs + d_b/2",
+    clause="2.3",
+    title="Centre of the bar to the nearest concrete surface",
+    basis=MECHANICS,
+)
+A_TR = _formula(
+    "A_tr = n_v*A_bs",
+    clause="12.2.2",
+    title="Area of the stirrup legs across the splitting plane",
+    basis=MECHANICS,
+)
 CENTRES = _formula(
     "s_bb = s_c + d_b",
     clause="12.2.2",
@@ -182,6 +206,13 @@ DEVELOPED_AREA = _formula(
     basis=FROM_MEMORY,
 )
 
+DEVELOPED_TOTAL = _formula(
+    "A_sd = A_sd1 + A_sd2",
+    clause="11.3.6.4",
+    title="Area of all bars, counted as far as developed",
+    basis=MECHANICS,
+)
+
 COMPRESSION_BASIC = _formula(
     "l_db = max(0.24*d_b*f_y/min(sqrt(f_c), 8), 0.044*d_b*f_y)",
     clause="12.3.2",
@@ -214,8 +245,9 @@ DEVELOPED_COMPRESSION = _criterion(
 )
 
 FORMULAS = (
-    CENTRES, D_CS, K_TR, GENERAL, SHORT, LONG, L_D, L_D_EXCESS, L_D_BUNDLE, DEVELOPED_AREA,
-    COMPRESSION_BASIC, COMPRESSION, COMPRESSION_TIED,
+    FRESH_BELOW, CLEAR_OVERHANG, TO_SURFACE, A_TR, CENTRES, D_CS, K_TR, GENERAL, SHORT, LONG, L_D,
+    L_D_EXCESS, L_D_BUNDLE, DEVELOPED_AREA, DEVELOPED_TOTAL, COMPRESSION_BASIC, COMPRESSION,
+    COMPRESSION_TIED,
 )  # fmt: skip
 CRITERIA = (TOP_BAR, COVERED, SPACED, SPACED_SLAB, DEVELOPED, DEVELOPED_COMPRESSION)
 TABLES = (LOCATION, COATING, DENSITY, SIZE, BUNDLES)

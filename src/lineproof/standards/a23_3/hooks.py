@@ -12,6 +12,7 @@ from lineproof.formula import FROM_MEMORY, Formula, criterion, formula
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.notation import NOTATION
 from lineproof.standards.codes import CodePair
+from lineproof.standards.references import MECHANICS
 
 _formula = partial(formula, notation=NOTATION)
 _criterion = partial(criterion, notation=NOTATION)
@@ -82,6 +83,30 @@ L_DH_EXCESS = _formula(
     basis=FROM_MEMORY,
     numbers={"150": "mm"},
 )
+SIDE_COVER = _formula(
+    "c_side = c_c + d_bs",
+    clause="geometry",
+    title="Side cover of the hook, support as wide as the beam",
+    basis=MECHANICS,
+)
+SIDE_COVER_COLUMN = _formula(
+    "c_side = (b_col - b_w)/2 + c_c + d_bs",
+    clause="geometry",
+    title="Side cover of the hook in a wider support",
+    basis=MECHANICS,
+)
+FACE_COVER = _formula(
+    "c_top = c_c + d_bs",
+    clause="geometry",
+    title="Cover of the hooked bars at the top or bottom face",
+    basis=MECHANICS,
+)
+AVAILABLE = _formula(
+    "l_av = b_sp - c_end",
+    clause="geometry",
+    title="Length from the face of the support to the end of the bars",
+    basis=MECHANICS,
+)
 SIDE_COVERED = _criterion(
     "60 <= c_side",
     clause="12.5.3",
@@ -101,6 +126,16 @@ TAIL_COVERED = _criterion(
     yes="The cover on the tail is at least 50 mm.",
     no="The cover on the tail is below 50 mm: no reduction for cover.",
     key="hook-tail-cover",
+)
+FACE_COVERED = _criterion(
+    "60 <= c_top",
+    clause="12.5.4",
+    title="Cover of the hooked bars at the top or bottom face",
+    basis=FROM_MEMORY,
+    numbers={"60": "mm"},
+    yes="The cover is at least 60 mm.",
+    no="The cover is below 60 mm: ties around the hooks where the beam ends.",
+    key="hook-face-cover",
 )
 TIED = _criterion(
     "s_tie <= 3*d_b",
@@ -136,6 +171,6 @@ def basic_length(pair: CodePair) -> Formula:
     return BASIC
 
 
-FORMULAS = (BASIC, L_DH, L_DH_EXCESS)
-CRITERIA = (SIDE_COVERED, TAIL_COVERED, TIED, FITS)
+FORMULAS = (BASIC, L_DH, L_DH_EXCESS, SIDE_COVER, SIDE_COVER_COLUMN, FACE_COVER, AVAILABLE)
+CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, FITS)
 TABLES = (COVER_FACTORS, TIE_FACTORS, DENSITY_FACTORS, COATING_FACTORS)

@@ -6,7 +6,7 @@ from functools import partial
 
 from lineproof.formula import FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION
-from lineproof.standards.references import DEVELOPMENT_GUIDE
+from lineproof.standards.references import DEVELOPMENT_GUIDE, MECHANICS
 
 _formula = partial(formula, notation=NOTATION)
 _criterion = partial(criterion, notation=NOTATION)
@@ -78,6 +78,36 @@ CLOSE = _criterion(
     no="The lapped bars are NOT close enough.",
     key="lap-distance",
 )
+LONG_ENOUGH = _criterion(
+    "l_s <= l_lp",
+    clause="12.15",
+    title="Length of the lap",
+    basis=FROM_MEMORY,
+    yes="The lap is long enough.",
+    no="The lap is NOT long enough.",
+    key="lap-length",
+)
+CLEAR_CORNERS = _formula(
+    "s_cl = s_c - d_b",
+    clause="A23.1 6.6.5.2",
+    title="Clear distance at the lap, corner bars lapped in contact",
+    basis=MECHANICS,
+)
+CLEAR_PAIR = _formula(
+    "s_cl = s_c - 2*d_b",
+    clause="A23.1 6.6.5.2",
+    title="Clear distance at the lap, two bars lapped in contact",
+    basis=MECHANICS,
+)
+ROOM = _criterion(
+    "s_min <= s_cl",
+    clause="A23.1 6.6.5.2",
+    title="Room for concrete at the lap",
+    basis=FROM_MEMORY,
+    yes="The bars stand far enough apart at the lap.",
+    no="The bars do NOT stand far enough apart at the lap.",
+    key="lap-room",
+)
 
-FORMULAS = (CLASS_A, CLASS_B, COMPRESSION, COMPRESSION_STRONG)
-CRITERIA = (LAPPABLE, EXCESS_FOR_A, SHARE_FOR_A, CLOSE)
+FORMULAS = (CLASS_A, CLASS_B, COMPRESSION, COMPRESSION_STRONG, CLEAR_CORNERS, CLEAR_PAIR)
+CRITERIA = (LAPPABLE, EXCESS_FOR_A, SHARE_FOR_A, CLOSE, LONG_ENOUGH, ROOM)

@@ -1,0 +1,134 @@
+"""What the detailing of a beam starts from: bars of its sections, strengths, stirrups, shear.
+
+Plain data in N, mm, MPa, degrees; ``x`` along the beam as in ``layout``.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+from lineproof.beams.bars import BarLayers
+from lineproof.beams.continuous.forces import Forces
+from lineproof.beams.continuous.layout import BeamOutline
+from lineproof.standards.codes import CodePair
+
+Expression = Literal["table", "general"]
+"""Which expression of 12.2 gives the development length."""
+THETA = 35.0
+"""Angle of the diagonal compression where no shear design says otherwise [deg]."""
+STOCK = 12_000.0
+END_COVER = 50.0
+
+
+@dataclass(frozen=True, slots=True)
+class Strengths:
+    """Strengths, resistance factors and what else of the materials anchorage depends on."""
+
+    f_c: float
+    f_y: float
+    phi_c: float
+    phi_s: float
+    alpha_1: float
+    a_max: float
+    density: str = "normal"
+
+
+@dataclass(frozen=True, slots=True)
+class Stirrups:
+    """Stirrups as anchorage counts them: the largest spacing along the beam.
+
+    ``minimum`` says whether the minimum of 11.2.8.2 stands all along.
+    """
+
+    size: str
+    legs: int
+    spacing: float
+    minimum: bool = True
+
+
+@dataclass(frozen=True, slots=True)
+class TopBars:
+    """Top bars of a support: layers in the web, and a count in all overhangs together."""
+
+    web: BarLayers = ()
+    overhang: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class SectionBars:
+    """Bars of the sections before detailing.
+
+    ``bottom`` holds one item a span (of a cantilever: the bars below), ``top`` one a support;
+    ``holders`` is the size of the two bars that hold the stirrups between the top bars.
+    """
+
+    bottom: tuple[BarLayers, ...]
+    top: tuple[TopBars, ...]
+    holders: str
+
+
+@dataclass(frozen=True, slots=True)
+class ShearStretch:
+    """Shear resistance over a stretch of the beam: whole, of the stirrups, and the angle."""
+
+    start: float
+    end: float
+    V_r: float
+    V_s: float
+    theta: float = THETA
+
+
+@dataclass(frozen=True, slots=True)
+class Basis:
+    """What a development length depends on besides the bar itself."""
+
+    outline: BeamOutline
+    strengths: Strengths
+    stirrups: Stirrups
+    expression: Expression = "table"
+
+
+@dataclass(frozen=True, eq=False)
+class Designed:
+    """A beam whose sections are designed and whose bars are to be laid.
+
+    ``shear`` may be empty: then no stirrups are counted against the tension that shear leaves in
+    the bars, and no bar is cut in a tension zone. ``breadths`` gives the width of a column across
+    the beam by support number, where it is known. ``end_cover`` is the concrete outside of the
+    bars at the ends of the beam, ``stock`` the longest bar. ``end_forces`` [N] of 11.3.9.5 by
+    support number replace those found here.
+    """
+
+    basis: Basis
+    forces: Forces
+    bars: SectionBars
+    pair: CodePair
+    shear: tuple[ShearStretch, ...] = ()
+    breadths: Mapping[int, float] = field(default_factory=dict)
+    end_cover: float = END_COVER
+    stock: float = STOCK
+    end_forces: Mapping[int, float] = field(default_factory=dict)
+
+    @property
+    def outline(self) -> BeamOutline:
+        """The concrete of the beam."""
+        return self.basis.outline
+
+    @property
+    def strengths(self) -> Strengths:
+        """The strengths."""
+        return self.basis.strengths
+
+    def cantilever(self, span: int) -> bool:
+        """Whether a span is a cantilever."""
+        return any(s.kind == "free" for s in self.outline.supports[span - 1 : span + 1])
+
+    def exterior(self, support: int) -> bool:
+        """Whether a support is the last one of the beam that holds it at that end."""
+        return support in (1, len(self.outline.supports)) and self.held(support)
+
+    def held(self, support: int) -> bool:
+        """Whether a support is no free end."""
+        return self.outline.supports[support - 1].kind != "free"
