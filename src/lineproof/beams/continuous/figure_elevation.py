@@ -1,0 +1,186 @@
+"""Elevation of a beam to scale: concrete, supports, stirrups, bars drawn apart, dimensions."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from lineproof.beams.continuous.figure_elevation_bars import (
+    PITCH,
+    bars_in_place,
+    draw_rows,
+    pulled_bars,
+)
+from lineproof.beams.continuous.figure_elevation_concrete import STUB, axis_lines, concrete
+from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, parts, view
+from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
+from lineproof.beams.continuous.layout import BeamOutline, Detailing
+from lineproof.drawing import LIGHT, OUTLINE, Arrow, Dimension, Figure, Line, Shape, Text, words
+
+TOP_ROW = 9.0
+"""Height of the first row of top bars over the beam, mm on paper."""
+BUBBLE = 2.4
+NOTE = 2.6
+Section = tuple[str, float]
+"""Letter of a section and its station [mm]."""
+
+
+def elevation_figures(
+    outline: BeamOutline,
+    detailing: Detailing,
+    *,
+    sections: Sequence[Section] = (),
+    grade: str = "400R",
+) -> tuple[Figure, ...]:
+    """Return the elevation in rows of spans, each at a scale that can be read on the page."""
+    return tuple(
+        elevation_figure(outline, detailing, spans=spans, sections=sections, grade=grade)
+        for spans in parts(outline)
+    )
+
+
+def elevation_figure(
+    outline: BeamOutline,
+    detailing: Detailing,
+    *,
+    spans: tuple[int, int] | None = None,
+    sections: Sequence[Section] = (),
+    grade: str = "400R",
+    width: float = PAGE_WIDTH,
+) -> Figure:
+    """Draw the spans given (the whole beam without) on a width of paper [mm].
+
+    ``detailing`` has its marks (:func:`lineproof.beams.continuous.schedule.schedule`).
+    """
+    seen = view(outline, detailing, spans or (1, len(outline.lengths)), width)
+    top = [run for run in detailing.bars if run.face == "top" and run.place != "side face"]
+    low = [run for run in detailing.bars if run not in top]
+    rows_up, rows_down = pulled_bars(seen, top, grade), pulled_bars(seen, low, grade)
+    ceiling = TOP_ROW + len(rows_up) * PITCH
+    zones, zone_height = zone_block(seen, detailing.stirrups, -seen.deepest * seen.scale - STUB)
+    first_low = -seen.deepest * seen.scale - STUB - zone_height - 5.5
+    floor = first_low - len(rows_down) * PITCH
+    shapes = [
+        *axis_lines(seen, ceiling, floor - 11.0, BUBBLE),
+        *concrete(seen),
+        *stirrup_lines(seen, detailing.stirrups),
+        *bars_in_place(seen, detailing.bars, outline.cover),
+        *_section_marks(seen, sections),
+        *draw_rows(seen, rows_up, TOP_ROW, 1),
+        *zones,
+        *draw_rows(seen, rows_down, first_low, -1),
+        *_spans(seen, floor),
+        *_notes(seen, detailing, floor - 16.5),
+    ]
+    bottom = 24.0 - floor
+    return Figure(
+        width,
+        round(bottom + ceiling + 2 * BUBBLE + 1.5, 1),
+        seen.scale,
+        (round(seen.left - seen.low * seen.scale, 4), round(bottom, 1)),
+        tuple(shapes),
+        _alt(seen, detailing),
+        _caption(seen),
+    )
+
+
+def _section_marks(seen: View, sections: Sequence[Section]) -> list[Shape]:
+    """Mark where sections are cut: strokes above and below, arrow and letter above."""
+    shapes: list[Shape] = []
+    for letter, x in sections:
+        if not seen.low <= x <= seen.high:
+            continue
+        height = seen.mm(1.0)
+        depth = -seen.deepest
+        shapes += [
+            Line((x, height), (x, height + seen.mm(2.4)), "dimensions", OUTLINE),
+            Line((x, depth - height), (x, depth - height - seen.mm(1.6)), "dimensions", OUTLINE),
+            Arrow(
+                (x, height + seen.mm(2.4)), (x - seen.mm(2.6), height + seen.mm(2.4)),
+                "dimensions", LIGHT, 1.4,
+            ),
+            Text(
+                (x + seen.mm(0.9), height + seen.mm(1.6)), ((letter, "bold"),), "text", 2.8,
+                "start",
+            ),
+        ]  # fmt: skip
+    return shapes
+
+
+def _spans(seen: View, floor: float) -> list[Shape]:
+    """Dimension the clear lengths, then the spans between axes."""
+    outline = seen.outline
+    shapes: list[Shape] = []
+    for span in seen.spans:
+        start, end = outline.faces(span)
+        left, right = outline.axes[span - 1 : span + 1]
+        y = seen.mm(floor)
+        if (start, end) != (left, right):
+            shapes.append(
+                Dimension((start, y), (end, y), "horizontal", -4.0, words("clear"), size=2.3)
+            )
+        shapes.append(Dimension((left, y), (right, y), "horizontal", -9.5))
+    return shapes
+
+
+def _notes(seen: View, detailing: Detailing, height: float) -> list[Shape]:
+    closed = {zone.closed for zone in detailing.stirrups if zone.span in seen.spans}
+    legs = {zone.legs for zone in detailing.stirrups if zone.span in seen.spans}
+    forms = " and ".join("closed" if each else "open" for each in sorted(closed))
+    scale = f"Dimensions in mm, scale 1 : {seen.ratio:g}."
+    drawn = "Bars are drawn apart from the beam, with cut lengths; their ends are dimensioned from"
+    lines = [f"{scale} {drawn} the support axes."]
+    if closed:
+        count = ", ".join(map(str, sorted(legs)))
+        lines.append(
+            f"Stirrups: {forms}, {count} legs; number, size, spacing, mark, and the distance from "
+            "the first to the last stirrup of a zone."
+        )
+    return [
+        Text(seen.at(1.0, height - 3.6 * number), words(line), "text", NOTE, "start")
+        for number, line in enumerate(lines)
+    ]
+
+
+def _caption(seen: View) -> str:
+    if not (seen.cut_left or seen.cut_right):
+        return "Elevation"
+    if seen.first == seen.last:
+        return f"Elevation, span {seen.first}"
+    return f"Elevation, spans {seen.first} to {seen.last}"
+
+
+def _alt(seen: View, detailing: Detailing) -> str:
+    """Say in words what the elevation shows."""
+    outline = seen.outline
+    parts_ = [
+        f"{_caption(seen)} at 1 : {seen.ratio:g}: "
+        + ", ".join(
+            f"span {span} of {outline.lengths[span - 1]:.0f} mm, {outline.depths[span - 1]:.0f} mm "
+            "deep"
+            for span in seen.spans
+        )
+    ]
+    low, high = seen.own
+    for face in ("bottom", "top"):
+        runs = [
+            f"{run.mark} {run.number}-{run.size} from {run.start:.0f} to {run.end:.0f}"
+            for run in detailing.bars
+            if run.face == face and run.start < high and run.end > low
+        ]
+        if runs:
+            parts_.append(f"{face} bars: {', '.join(runs)}")
+    zones = [
+        f"span {zone.span} {zone.number}-{zone.size} at {zone.spacing:.0f}"
+        for zone in detailing.stirrups
+        if zone.span in seen.spans
+    ]
+    if zones:
+        parts_.append(f"stirrups: {', '.join(zones)}")
+    return _short("; ".join(parts_))
+
+
+LONGEST_ALT = 3900
+
+
+def _short(text: str) -> str:
+    return f"{text[:LONGEST_ALT]} ..." if len(text) > LONGEST_ALT else f"{text}."

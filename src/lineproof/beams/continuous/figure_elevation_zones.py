@@ -1,0 +1,113 @@
+"""Stirrups of an elevation, and the row that names their zones. Heights are in mm on paper."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from itertools import pairwise
+
+from lineproof.beams.continuous.figure_elevation_view import View
+from lineproof.beams.continuous.layout import StirrupZone
+from lineproof.drawing import MEDIUM, THIN, Line, Runs, Shape, Text
+from lineproof.drawing.axes import spread
+from lineproof.drawing.metrics import text_width
+
+SIZE = 2.3
+LINE, TICK = -2.0, 0.85
+APART = 1.4
+FARTHEST = 6.0
+"""How far a name may stand beside the middle of its zone."""
+
+
+def stirrup_lines(view: View, zones: Sequence[StirrupZone]) -> list[Shape]:
+    """Draw each stirrup in its place."""
+    cover = view.outline.cover
+    shapes: list[Shape] = []
+    for zone in zones:
+        depth = view.outline.depths[zone.span - 1]
+        step = (zone.end - zone.start) / max(zone.number - 1, 1)
+        for number in range(zone.number):
+            x = zone.start + number * step
+            if view.low <= x <= view.high:
+                shapes.append(Line((x, -cover), (x, cover - depth), "stirrups", THIN * 0.8))
+    return shapes
+
+
+def zone_block(view: View, zones: Sequence[StirrupZone], top: float) -> tuple[list[Shape], float]:
+    """Draw a line a zone with its name below; return the shapes and the height they take."""
+    shown = sorted((z for z in zones if z.span in view.spans), key=lambda zone: zone.start)
+    if not shown:
+        return [], 0.0
+    y = top + LINE
+    shapes: list[Shape] = []
+    for zone in shown:
+        ends = view.paper(zone.start), view.paper(zone.end)
+        shapes.append(Line(view.at(ends[0], y), view.at(ends[1], y), "dimensions", THIN))
+        shapes += [
+            Line(view.at(x - TICK, y - TICK), view.at(x + TICK, y + TICK), "dimensions", MEDIUM)
+            for x in ends
+        ]
+    middles = [view.paper((zone.start + zone.end) / 2) for zone in shown]
+    places = _in_one_row(view, [_names(zone) for zone in shown], middles)
+    if places:
+        for zone, middle, place in zip(shown, middles, places, strict=True):
+            shapes += _flat(view, zone, middle, place, y)
+        return shapes, 10.6
+    names = [_one_line(zone) for zone in shown]
+    longest = max(text_width(name, SIZE) for name in names)
+    beside = spread(middles, SIZE + 0.7, 2.0, view.width - 2.0)
+    for name, middle, place in zip(names, middles, beside, strict=True):
+        start = view.at(middle, y - 0.4), view.at(place, y - 1.9)
+        shapes.append(Line(*start, "dimensions", THIN))
+        at = view.at(place, y - 2.6)
+        shapes.append(Text(at, name, "text", SIZE, "end", rotation=90.0))
+    return shapes, longest + 5.0
+
+
+def _names(zone: StirrupZone) -> tuple[Runs, Runs]:
+    """Two lines: number, size and spacing; mark and length."""
+    mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
+    return ((_count(zone), "roman"),), (*mark, (f"{zone.end - zone.start:.0f}", "roman"))
+
+
+def _count(zone: StirrupZone) -> str:
+    if zone.number == 1:
+        return f"1-{zone.size}"
+    return f"{zone.number}-{zone.size} @ {zone.spacing:.0f}"
+
+
+def _one_line(zone: StirrupZone) -> Runs:
+    mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
+    return (*mark, (f"{_count(zone)} = {zone.end - zone.start:.0f}", "roman"))
+
+
+def _in_one_row(
+    view: View, names: Sequence[tuple[Runs, Runs]], middles: Sequence[float]
+) -> list[float]:
+    """Places of the names in one row, moved apart; none if one would stand too far away."""
+    widths = [max(text_width(line, SIZE) for line in lines) for lines in names]
+    places = list(middles)
+    for _ in range(200):
+        for left, right in pairwise(range(len(places))):
+            lack = (widths[left] + widths[right]) / 2 + APART - (places[right] - places[left])
+            if lack > 0.0:
+                places[left] -= lack / 2
+                places[right] += lack / 2
+        places = [
+            min(max(place, width / 2 + 0.5), view.width - width / 2 - 0.5)
+            for place, width in zip(places, widths, strict=True)
+        ]
+    apart = all(
+        places[right] - places[left] >= (widths[left] + widths[right]) / 2 + APART - 0.1
+        for left, right in pairwise(range(len(places)))
+    )
+    near = all(abs(a - b) <= FARTHEST for a, b in zip(places, middles, strict=True))
+    return places if apart and near else []
+
+
+def _flat(view: View, zone: StirrupZone, middle: float, place: float, y: float) -> list[Shape]:
+    first, second = _names(zone)
+    return [
+        Line(view.at(middle, y - 0.4), view.at(place, y - 1.7), "dimensions", THIN),
+        Text(view.at(place, y - 3.6), first, "text", SIZE),
+        Text(view.at(place, y - 6.7), second, "text", SIZE),
+    ]
