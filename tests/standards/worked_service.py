@@ -50,6 +50,11 @@ ANALYSIS = (
     ),
     W("analysis.LARGEST_CHANGE", {"c": 50, "d": 500}, "min(30 - 5, 20) = 20.0"),
     W("analysis.LARGEST_CHANGE", {"c": 350, "d": 500}, "max(30 - 35, 0) = 0.0"),
+    W("analysis.CLEAR_SPAN", {"l": 7.6, "b_sl": 400, "b_sr": 450}, "7.6 - (0.4 + 0.45)/2 = 7.175"),
+    W("analysis.CLEAR_FROM_LEFT", {"l": 2.1, "b_sl": 400}, "2.1 - 0.4/2 = 1.9"),
+    W("analysis.CLEAR_FROM_RIGHT", {"l": 2.1, "b_sr": 450}, "2.1 - 0.45/2 = 1.875"),
+    W("analysis.TO_FACE", {"b_sn": 450}, "0.45/2 = 0.225"),
+    W("analysis.FROM_FACE", {"b_sn": 450, "d_v": 505.8}, "0.45/2 + 0.5058 = 0.7308"),
     W("analysis.REDISTRIBUTED", {"M_fe": 240, "p_rd": 15}, "240*(1 - 0.15) = 204"),
     W("analysis.MEAN_SPAN", {"l_n1": 7.2, "l_n2": 6.4}, "(7.2 + 6.4)/2 = 6.8"),
     W(

@@ -178,7 +178,8 @@ class _Builder:
                 "unit": test.unit,
                 "conclusion": test.yes,
                 "printed": self._printer.comparison(test, closing_args, sides, holds=holds),
-            },
+            }
+            | ({} if test.system == "N-mm" else {"system": test.system}),
         }
 
     def _criterion(self, entry: Entry) -> dict[str, Any]:

@@ -252,7 +252,10 @@ def _found(entry_id: str, entry: Data) -> None:
         raise UserError(f"record: {entry_id}: a setting is not a number")
     _printed_value(entry_id, entry["printed"], entry["unit"])
     _printed_args(entry_id, entry)
-    _comparison(entry_id, entry["closing"])
+    closing = entry["closing"]
+    _comparison(entry_id, closing)
+    if closing.get("system", "N-mm") not in _SYSTEMS:
+        raise UserError(f"record: {entry_id}: the system of its closing criterion is damaged")
 
 
 def _figure(entry_id: str, entry: Data) -> None:

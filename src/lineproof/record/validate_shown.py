@@ -15,7 +15,7 @@ Data = Mapping[str, Any]
 FILES = {FIGURE: "dxf", TABLE: "csv"}
 """The file that an entry of a kind may be issued as."""
 LAST_FRONT = 9999
-WIDEST = 200.0
+WIDEST = 174.0
 _STEM = re.compile(r"[A-Za-z0-9][A-Za-z0-9_-]{0,59}\Z")
 
 
@@ -54,10 +54,11 @@ def _check_widths(entry_id: str, entry: Data) -> None:
     if widths is None:
         return
     fits = isinstance(widths, list) and len(widths) == len(entry["columns"])
-    if not fits or not all(is_number(width) and 0 <= width <= WIDEST for width in widths):
+    known = fits and all(is_number(width) and width >= 0 for width in widths)
+    if not known or sum(widths) > WIDEST:
         raise UserError(
-            f"record: {entry_id}: widths={shown(widths)}; give one width a column, in mm on paper "
-            f"from 0 to {WIDEST:.0f}"
+            f"record: {entry_id}: widths={str(widths)[:60]}; give one width a column, in mm on "
+            f"paper, together {WIDEST:.0f} at most"
         )
 
 

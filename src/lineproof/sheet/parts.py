@@ -68,6 +68,11 @@ class Parts:
                 self._stopped.pop(key, None)
         self.expected = dict(calls)
 
+    @property
+    def part_entries(self) -> Mapping[str, Entry]:
+        """The entries made so far in the open part, by symbol."""
+        return self._open_part().entries
+
     def adopt(self, parts: Iterable[Part]) -> None:
         """Take over recorded parts as they are."""
         self._parts.update((part.key, part) for part in parts)

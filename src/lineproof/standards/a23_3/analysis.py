@@ -45,6 +45,42 @@ SHEAR_FACTORS = LookupTable(
     basis=FROM_MEMORY,
 )
 
+CLEAR_SPAN = _formula(
+    "l_n = l - (b_sl + b_sr)/2",
+    clause="9.2.2",
+    title="Clear span",
+    basis=MECHANICS,
+    system="kN-m",
+)
+CLEAR_FROM_LEFT = _formula(
+    "l_n = l - b_sl/2",
+    clause="9.2.2",
+    title="Clear length of the cantilever",
+    basis=MECHANICS,
+    system="kN-m",
+)
+CLEAR_FROM_RIGHT = _formula(
+    "l_n = l - b_sr/2",
+    clause="9.2.2",
+    title="Clear length of the cantilever",
+    basis=MECHANICS,
+    system="kN-m",
+)
+TO_FACE = _formula(
+    "x_f = b_sn/2",
+    clause="9.2.2",
+    title="From the support axis to the face",
+    basis=MECHANICS,
+    system="kN-m",
+)
+FROM_FACE = _formula(
+    "x_f = b_sn/2 + d_v",
+    clause="11.3.2",
+    title="From the support axis to the section at d_v from the face",
+    basis=MECHANICS,
+    system="kN-m",
+)
+
 LARGEST_CHANGE = _formula(
     "p_max = max(min(30 - 50*c/d, 20), 0)",
     clause="9.2.4",
@@ -116,6 +152,9 @@ LIKE_LOADS = _criterion(
     key="like-loads",
 )
 
-FORMULAS = (LARGEST_CHANGE, REDISTRIBUTED, MEAN_SPAN, POSITIVE, NEGATIVE, SHEAR)
+FORMULAS = (
+    CLEAR_SPAN, CLEAR_FROM_LEFT, CLEAR_FROM_RIGHT, TO_FACE, FROM_FACE, LARGEST_CHANGE,
+    REDISTRIBUTED, MEAN_SPAN, POSITIVE, NEGATIVE, SHEAR,
+)  # fmt: skip
 CRITERIA = (CHANGE_ALLOWED, LIKE_SPANS, LIKE_LOADS)
 TABLES = (MOMENT_DIVISORS, SHEAR_FACTORS)

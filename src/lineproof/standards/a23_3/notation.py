@@ -134,8 +134,8 @@ _ROWS = (
     ("V_sn", "V", "s,n", "", "shear at the near support axis, upward on the span", "kN"),
     ("x_f", "x", "", "", "distance of the section from the near support axis", "m"),
     ("b_sn", "b", "s,n", "", "width of the near support along the beam", "mm"),
-    ("b_s1", "b", "s1", "", "width of the left support along the beam", "mm"),
-    ("b_s2", "b", "s2", "", "width of the right support along the beam", "mm"),
+    ("b_sl", "b", "s,ℓ", "", "width of the left support along the beam", "mm"),
+    ("b_sr", "b", "s,r", "", "width of the right support along the beam", "mm"),
     # shear
     ("d_v", "d", "v", "", "effective shear depth", "mm"),
     ("beta", "β", "", "", "factor for the shear that cracked concrete carries", ""),

@@ -1,0 +1,110 @@
+"""Reactions by load type, unfactored, for whoever designs what carries the beam; equilibrium."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+
+from lineproof.beams.analysis.arrangements import LIVE
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.groups import (
+    Group,
+    ends_at,
+    moment_name,
+    named,
+    single_of,
+    uniform_name,
+    where,
+)
+from lineproof.beams.continuous.model import Model, SingleLoad
+from lineproof.beams.continuous.symbols import KINDS, code, required, stated
+from lineproof.record import Entry
+
+Scopes = Mapping[Group, Mapping[str, Entry]]
+
+
+def record_reactions(model: Model, scopes: Scopes) -> None:
+    """Record inside the open part every support's reaction by group, then sums and equilibrium.
+
+    For live load the largest reaction has it on those spans only that raise it.
+    """
+    supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
+    for group, scope in scopes.items():
+        made = {j: _reaction(model, group, scope, j) for j in supports}
+        _check_equilibrium(model, group, scope, [e for e in made.values() if e is not None])
+    for kind in dict.fromkeys(group.kind for group in scopes if group.kind in LIVE):
+        for j in supports:
+            _largest(model, kind, scopes, j)
+
+
+def _reaction(model: Model, group: Group, scope: Mapping[str, Entry], support: int) -> Entry | None:
+    """Record the reaction of a support due to one group, from the statics of its spans."""
+    terms = [t for span, end in ends_at(model, support) for t in end_shear(model, group, span, end)]
+    if not terms:
+        return None
+    title = f"Reaction of support {support}, {where(group)}, unfactored"
+    text = f"R_{support}{group.code} = {' + '.join(terms)}".replace("+ -", "- ")
+    return model.sheet.line(stated(text, title=title), **named(scope, text))
+
+
+def end_shear(model: Model, group: Group, span: int, end: End) -> list[str]:
+    """Return the terms of the upward force on a span at an end of it, due to one group."""
+    far: End = "right" if end == "left" else "left"
+    uniform, single = uniform_name(model, group, span), single_of(model, group, span)
+    if model.forces.beam.cantilever(span):
+        terms = [f"{uniform}*l_{span}"] if uniform else []
+        return terms + [_size(load) for load in single]
+    terms = [f"{uniform}*l_{span}/2"] if uniform else []
+    terms += [f"{_size(load)}*{_arm(load, span, end)}/l_{span}" for load in single]
+    own, other = moment_name(model, group, span, end), moment_name(model, group, span, far)
+    if own and other:
+        terms.append(f"({other} - {own})/l_{span}")
+    elif own or other:
+        terms.append(f"{other}/l_{span}" if other else f"-{own}/l_{span}")
+    return terms
+
+
+def _size(load: SingleLoad) -> str:
+    n = load.number
+    return f"P_x{n}" if load.at is not None else f"w_x{n}*(e_x{n} - s_x{n})"
+
+
+def _arm(load: SingleLoad, span: int, end: End) -> str:
+    """Return the distance of a load from the other end of its span."""
+    n = load.number
+    at = f"a_x{n}" if load.at is not None else f"(s_x{n} + e_x{n})/2"
+    return f"(l_{span} - {at})" if end == "left" else at if load.at is not None else f"({at})"
+
+
+def _check_equilibrium(
+    model: Model, group: Group, scope: Mapping[str, Entry], reactions: Sequence[Entry]
+) -> None:
+    """Record that the reactions of a group balance its loads."""
+    loads = []
+    for span in range(1, model.spans + 1):
+        uniform = uniform_name(model, group, span)
+        loads += [f"{uniform}*l_{span}"] if uniform else []
+        loads += [_size(load) for load in single_of(model, group, span)]
+    total = " + ".join(loads)
+    text = f"abs({' + '.join(r.symbol for r in reactions)} - ({total})) <= 0.001*({total})"
+    test = required(
+        text, "kN", title=f"Equilibrium, {where(group)}", yes="The reactions balance the loads.",
+        key=f"equilibrium-{group.code}",
+    )  # fmt: skip
+    model.sheet.check(test, **named(scope, total))
+
+
+def _largest(model: Model, kind: str, scopes: Scopes, support: int) -> None:
+    """Record the largest reaction of live load, on the spans that raise it."""
+    entries = model.sheet.part_entries
+    raising = [
+        f"R_{support}{group.code}"
+        for group in scopes
+        if group.kind == kind
+        and f"R_{support}{group.code}" in entries
+        and entries[f"R_{support}{group.code}"].value > 0
+    ]
+    if raising:
+        title = (
+            f"Largest reaction of support {support}, {KINDS[kind]} where it raises it, unfactored"
+        )
+        model.sheet.line(stated(f"R_{support}{code(kind)} = {' + '.join(raising)}", title=title))

@@ -1,0 +1,82 @@
+"""Analysis on the sheet: support moments and reactions by load type, as specified.
+
+Everything that follows - cases, shears, moments in the spans - is a sum of these or statics, line
+by line.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from lineproof.beams.continuous.groups import groups_of, moment_name
+from lineproof.beams.continuous.loads import kind_text
+from lineproof.beams.continuous.model import ANALYSIS, Model, near_support
+from lineproof.beams.continuous.reactions import record_reactions
+from lineproof.beams.continuous.support_moments import SupportMoments
+from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered
+from lineproof.formula import Symbol
+
+_SIGNS = (
+    "Moments are positive where the bottom is in tension; loads act downward, reactions upward. "
+    "Each row of support moments belongs to one load type as specified (not factored): dead load "
+    "and snow on all spans, live load on one span at a time; every case is a sum of these rows."
+)
+_SAME = "The bending stiffness is taken the same in all spans, so it cancels."
+_GROSS = "Bending stiffness of the gross sections of the spans, with one modulus of elasticity."
+
+
+def record_analysis(model: Model) -> None:
+    """Record the part of the analysis: support moments by group, reactions, equilibrium."""
+    sheet = model.sheet
+    sheet.notation = sheet.notation | notation(_symbols(model))
+    with sheet.part(ANALYSIS, "Analysis: moments at the supports by load type"):
+        sheet.note("signs", _SIGNS, title="Signs")
+        sheet.note(
+            "stiffness", _GROSS if model.inertias else _SAME, title="Stiffness",
+            clause="9.2.1", basis="common practice",
+        )  # fmt: skip
+        scopes = {}
+        for group in groups_of(model):
+            moments = SupportMoments(model, group)
+            moments.record()
+            scopes[group] = moments.scope
+        record_reactions(model, scopes)
+
+
+def _symbols(model: Model) -> Iterator[Symbol]:
+    for group in groups_of(model):
+        words = f"live load on span {group.span}" if group.span else KINDS[group.kind]
+        for span in range(1, model.spans + 1):
+            for end in ("left", "right"):
+                name = moment_name(model, group, span, end)
+                support = near_support(span, end)
+                if name:
+                    side = {"l": "ℓ", "r": "r"}.get(name[2 + len(str(support))], "")
+                    yield numbered(
+                        name,
+                        "M",
+                        f"{support}{side},{group.text}",
+                        f"moment at support {support}, {words}",
+                    )
+            for letter, end in (("a", "left"), ("b", "right")):
+                yield numbered(
+                    f"F_{span}{letter}{group.code}",
+                    "F",
+                    f"{span}{letter},{group.text}",
+                    f"slope at the {end} end of span {span}, simply supported, times EI, {words}",
+                )
+        for support in range(1, model.spans + 2):
+            sub = f"{support},{kind_text(group.kind)}"
+            yield numbered(
+                f"R_{support}{code(group.kind)}",
+                "R",
+                sub,
+                f"reaction of support {support}, {KINDS[group.kind]}, unfactored",
+            )
+            if group.span:
+                yield numbered(
+                    f"R_{support}{group.code}",
+                    "R",
+                    f"{support},{group.text}",
+                    f"reaction of support {support}, {words}, unfactored",
+                )
