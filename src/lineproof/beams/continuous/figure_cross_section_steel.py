@@ -1,0 +1,213 @@
+"""Steel of a section: which bars and stirrups stand at a station, and where they lie [mm].
+
+The web reaches from x = 0 to b_w, the soffit lies at y = 0.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from itertools import groupby
+
+from lineproof.beams.continuous.bending import BentShape, stirrup_radius
+from lineproof.beams.continuous.figure_chain import ahead, outlines
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face, StirrupZone
+from lineproof.beams.continuous.schedule_stirrups import stirrup_set
+from lineproof.beams.figure_section import Shown
+from lineproof.beams.section_shape import SectionShape
+from lineproof.drawing import THIN, Circle, Shape
+from lineproof.standards.a23_3.bars import BARS
+
+STROKE = THIN * 1.3
+LEAST_LAYER = 30.0
+
+
+@dataclass(frozen=True, slots=True)
+class Steel:
+    """What stands at a station of a span: runs, the zone of stirrups, the concrete around."""
+
+    outline: BeamOutline
+    span: int
+    runs: tuple[BarRun, ...]
+    zone: StirrupZone | None
+    stirrup: float
+    bend: float
+    aggregate: float
+
+    @property
+    def depth(self) -> float:
+        """Overall depth of the span [mm]."""
+        return self.outline.depths[self.span - 1]
+
+    @property
+    def cover(self) -> float:
+        """Clear cover to the stirrups [mm]."""
+        return self.outline.cover
+
+    @property
+    def signature(self) -> tuple[object, ...]:
+        """What makes two sections alike."""
+        runs = sorted((r.face, r.layer, r.place, r.size, r.mark, r.number) for r in self.runs)
+        zone = self.zone
+        stirrups = (zone.size, zone.legs, zone.closed, zone.spacing) if zone else None
+        return (self.depth, self.outline.widths[self.span - 1], tuple(runs), stirrups)
+
+    def layers(self, face: Face) -> list[list[BarRun]]:
+        """Return the runs within the web by layer, nearest the face first."""
+        mine = [run for run in self.runs if run.face == face and run.place == "web"]
+        mine.sort(key=lambda run: run.layer)
+        return [list(runs) for _, runs in groupby(mine, key=lambda run: run.layer)]
+
+    def rests(self, face: Face) -> list[float]:
+        """Return how far from the face the outer side of each layer lies [mm]."""
+        places: list[float] = []
+        at = self.cover + self.stirrup
+        for layer in self.layers(face):
+            thick = max(run.diameter for run in layer)
+            places.append(at)
+            at += thick + max(1.4 * thick, 1.4 * self.aggregate, LEAST_LAYER)
+        return places
+
+    def effective_depth(self, tension: Face) -> float | None:
+        """Depth to the centroid of the web bars of a face; none without bars [mm]."""
+        parts = [
+            (run.area, self.depth - rest - run.diameter / 2)
+            for layer, rest in zip(self.layers(tension), self.rests(tension), strict=True)
+            for run in layer
+        ]
+        area = sum(each for each, _ in parts)
+        return sum(each * depth for each, depth in parts) / area if area else None
+
+
+def steel_at(outline: BeamOutline, detailing: Detailing, x: float, aggregate: float) -> Steel:
+    """Return the steel at a station; the stirrups beside it where it lies between zones."""
+    span = span_of(outline, x)
+    runs = tuple(run for run in detailing.bars if run.start <= x <= run.end)
+    zones = [zone for zone in detailing.stirrups if zone.span == span]
+    zone = min(zones, key=lambda each: _beyond(each, x), default=None)
+    size = zone.size if zone else ""
+    diameter = BARS.number(size, "d_b") if size else 0.0
+    bend = stirrup_radius(size) if size else 0.0
+    return Steel(outline, span, runs, zone, diameter, bend, aggregate)
+
+
+def span_of(outline: BeamOutline, x: float) -> int:
+    """Return the span of a station; at an axis, the one to its right."""
+    return 1 + sum(axis <= x for axis in outline.axes[1:-1])
+
+
+def _beyond(zone: StirrupZone, x: float) -> float:
+    return max(zone.start - x, x - zone.end, 0.0)
+
+
+Placed = list[tuple[BarRun, Circle]]
+
+
+def web_circles(steel: Steel) -> Placed:
+    """Place the bars of each layer over the width, the thickest in the corners."""
+    placed: Placed = []
+    for face in ("bottom", "top"):
+        outer: list[float] = []
+        for layer, rest in zip(steel.layers(face), steel.rests(face), strict=True):
+            bars = _thick_outside([run for run in layer for _ in range(run.number)])
+            places = _across(steel, bars, outer)
+            outer = outer or places
+            for run, x in zip(bars, places, strict=True):
+                inset = rest + run.diameter / 2
+                y = inset if face == "bottom" else steel.depth - inset
+                placed.append((run, Circle((x, y), run.diameter / 2, "bars")))
+    return placed
+
+
+def _thick_outside(bars: Sequence[BarRun]) -> list[BarRun]:
+    """Order bars so that the thickest stand outside, pair by pair."""
+    order = sorted(bars, key=lambda run: -run.diameter)
+    return [*order[0::2], *reversed(order[1::2])]
+
+
+def _across(steel: Steel, bars: Sequence[BarRun], outer: Sequence[float]) -> list[float]:
+    """Return the x of each bar; a second layer stands in line with the first where it can."""
+    count, width = len(bars), steel.outline.b_w
+    if count == 1:
+        return [width / 2]
+    if len(outer) >= count and (count % 2 == 0 or len(outer) % 2 == 1):
+        half = count // 2
+        middle = [outer[len(outer) // 2]] if count % 2 else []
+        return [*outer[:half], *middle, *outer[len(outer) - half :]]
+    edge = steel.cover + steel.stirrup
+    first = edge + max(steel.bend, bars[0].diameter / 2)
+    last = width - edge - max(steel.bend, bars[-1].diameter / 2)
+    return [first + (last - first) * number / (count - 1) for number in range(count)]
+
+
+def overhang_circles(steel: Steel, shape: SectionShape, shown: Shown) -> Placed:
+    """Spread the bars in the overhangs evenly over what is drawn of them, half at each side."""
+    sides = [
+        (face, way, reach)
+        for face, way, reach in ((0.0, -1.0, shown.left), (shape.b_w, 1.0, shown.right))
+        if reach > 0.0
+    ]
+    placed: Placed = []
+    for run in steel.runs:
+        if run.place != "overhang" or not sides:
+            continue
+        inset = steel.cover + steel.stirrup + run.diameter / 2
+        y = shape.h - inset if run.face == "top" else shape.h - shape.h_f + inset
+        for index, (face, way, reach) in enumerate(sides):
+            share = run.number // len(sides) + (index < run.number % len(sides))
+            for number in range(share):
+                x = face + way * (number + 0.5) * reach / share
+                placed.append((run, Circle((x, y), run.diameter / 2, "bars")))
+    return placed
+
+
+def side_circles(steel: Steel) -> Placed:
+    """Place the bars of the side faces, half at each, evenly between the outer layers."""
+    placed: Placed = []
+    inset = steel.cover + steel.stirrup
+    low, high = inset, steel.depth - max(inset, steel.outline.h_f)
+    for run in steel.runs:
+        if run.place != "side face":
+            continue
+        for index, way in enumerate((0, 1)):
+            share = run.number // 2 + (index < run.number % 2)
+            edge = inset + run.diameter / 2
+            x = edge if way == 0 else steel.outline.b_w - edge
+            for number in range(share):
+                y = low + (high - low) * (number + 1) / (share + 1)
+                placed.append((run, Circle((x, y), run.diameter / 2, "bars")))
+    return placed
+
+
+def stirrup_shapes(steel: Steel) -> list[Shape]:
+    """Draw the pieces of the stirrups with both edges and their true bends."""
+    if steel.zone is None:
+        return []
+    width, diameter = steel.outline.b_w - 2 * steel.cover, steel.stirrup
+    shapes: list[Shape] = []
+    spacing = (width - diameter) / (steel.zone.legs - 1)
+    leg = 1
+    for index, (piece, count) in enumerate(stirrup_set(steel.outline, steel.zone).pieces):
+        for _ in range(count):
+            left = steel.cover if index == 0 else steel.cover + leg * spacing
+            shapes.extend(_piece(piece, left, steel.cover))
+            leg += 0 if index == 0 else 2
+    return shapes
+
+
+def _piece(piece: BentShape, left: float, bottom: float) -> Iterable[Shape]:
+    """Draw a piece whose outer lower left corner lies at (left, bottom)."""
+    diameter = piece.diameter
+    centre = piece.radius + diameter / 2
+    sizes = dict(piece.legs)
+    height = max(sizes["A"], sizes.get("B", 0.0)) if piece.form != "closed stirrup" else sizes["A"]
+    axis, top = left + diameter / 2, bottom + height - diameter / 2
+    if piece.form in {"open stirrup", "single leg"}:
+        start, heading = (axis + centre + piece.straights[0], top), 180.0
+    else:
+        corner = (axis + centre, top - centre)
+        start = ahead(ahead(corner, 45.0, centre), 135.0, -piece.straights[0])
+        heading = 135.0
+    return outlines(
+        start, heading, piece.straights, piece.bends, piece.radius, diameter, "stirrups", STROKE
+    )
