@@ -2,5 +2,13 @@
 
 from lineproof.beams.floor_beam import FloorBeam, floor_beam
 from lineproof.beams.study import SectionStudy, section_study
+from lineproof.beams.validation.study import ValidationStudy, validation_study
 
-__all__ = ["FloorBeam", "SectionStudy", "floor_beam", "section_study"]
+__all__ = [
+    "FloorBeam",
+    "SectionStudy",
+    "ValidationStudy",
+    "floor_beam",
+    "section_study",
+    "validation_study",
+]
