@@ -1,0 +1,146 @@
+"""The record of point and partial loads in deflections: what each adds to a moment."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from typing import Any
+
+from lineproof.beams.continuous.deflection_service import FreeEnd, Point, Stage
+from lineproof.beams.steps import Steps
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import deflection_stages as stages
+
+Sums = Mapping[Stage, Entry]
+"""What point and partial loads add to a moment, by stage; a stage without such loads is absent."""
+
+
+@dataclass(frozen=True)
+class LocalLoad:
+    """A point load (P_s at x_P) or a partial load (w_p from x_1 to x_2), as recorded.
+
+    Stations from the left axis of the span. ``live`` load acts in the stage of all load, and with
+    ``share`` of it in the sustained stage (None: nothing of it). Live load that is not on this span
+    in the arrangement is left out by whoever lists them.
+    """
+
+    bound: Mapping[str, Entry]
+    live: bool = False
+    share: Entry | None = None
+
+    @property
+    def partial(self) -> bool:
+        """Whether it lies on part of the span."""
+        return "w_p" in self.bound
+
+
+def record_local(
+    steps: Steps, loads: Sequence[LocalLoad], *, cantilever: FreeEnd, behind: bool = False
+) -> Sums:
+    """Record inside the open part what every load adds, and the sum at every stage.
+
+    ``cantilever`` is its free end, or "" for a span; ``behind`` for loads on the span behind it.
+    """
+    made: list[tuple[LocalLoad, Entry]] = []
+    letter = "b" if behind else ""
+    for load in loads:
+        for P_s, x_P in _points(steps, load, len(made), letter, halved=behind or not cantilever):
+            place = f"{letter}{len(made) + 1}"
+            made.append((load, _addition(steps, P_s, x_P, place, cantilever, behind=behind)))
+    terms: dict[Stage, list[tuple[LocalLoad, Entry]]] = {
+        "dead": [t for t in made if not t[0].live],
+        "sustained": [t for t in made if not t[0].live or t[0].share is not None],
+        "all": made,
+    }
+    return {stage: _sum(steps, stage, rows, letter) for stage, rows in terms.items() if rows}
+
+
+def _points(
+    steps: Steps, load: LocalLoad, before: int, letter: str, *, halved: bool
+) -> Iterator[tuple[Entry, Entry]]:
+    """Give the point loads, with their stations, that deflect the span as the load does."""
+    if not load.partial:
+        yield load.bound["P_s"], load.bound["x_P"]
+        return
+    l = steps.entry("l_bk" if letter else "l")
+    w_p, start, end = (load.bound[name] for name in ("w_p", "x_1", "x_2"))
+    stretches = [(start, end)]
+    if halved and start.value < l.value / 2 < end.value:
+        middle = steps.sheet.line(stages.MIDDLE, symbol=f"x_m{letter}{before + 1}", l=l)
+        stretches = [(start, middle), (middle, end)]
+    for x_1, x_2 in stretches:
+        number = f"{letter}{before + 1}"
+        bound: dict[str, Any] = {"x_1": x_1, "x_2": x_2}
+        P_s = steps.sheet.line(stages.HALF_OF_PARTIAL, symbol=f"P_s{number}", w_p=w_p, **bound)
+        for formula in (stages.FIRST_POINT, stages.SECOND_POINT):
+            before += 1
+            yield P_s, steps.sheet.line(formula, symbol=f"x_P{letter}{before}", **bound)
+
+
+def _addition(
+    steps: Steps, P_s: Entry, x_P: Entry, place: str, cantilever: FreeEnd, *, behind: bool
+) -> Entry:
+    """Record the distances of a point load and what it adds to the moment."""
+    line, symbol = steps.sheet.line, f"M_P{place}"
+    l = steps.entry("l_bk" if behind else "l")
+    if behind:
+        a_s = line(stages.FROM_NEARER, symbol=f"a_s{place}", x_P=x_P, l=l)
+        b_s = x_P
+        if cantilever == "left":
+            b_s = line(
+                stages.FROM_RIGHT, symbol=f"b_s{place}", x_P=x_P, l=l,
+                title="Distance of the load from the far support",
+            )  # fmt: skip
+        return line(
+            stages.POINT_LOAD_BEHIND, symbol=symbol, P_s=P_s, a_s=a_s, b_s=b_s, l_bk=l
+        )  # fmt: skip
+    if cantilever:
+        a_s = x_P
+        if cantilever == "left":
+            a_s = line(stages.FROM_RIGHT, symbol=f"a_s{place}", x_P=x_P, l=l)
+        return line(stages.POINT_LOAD_CANTILEVER, symbol=symbol, P_s=P_s, a_s=a_s, l=l)
+    a_s = line(stages.FROM_NEARER, symbol=f"a_s{place}", x_P=x_P, l=l)
+    return line(stages.POINT_LOAD, symbol=symbol, P_s=P_s, a_s=a_s, l=l)
+
+
+_ENDINGS: Mapping[Stage, str] = {"dead": "D", "sustained": "sus", "all": "DL"}
+
+
+def _sum(steps: Steps, stage: Stage, rows: Sequence[tuple[LocalLoad, Entry]], letter: str) -> Entry:
+    """Record the sum of what the loads of a stage add."""
+    bound: dict[str, Entry] = {}
+    words = []
+    for load, entry in rows:
+        bound[entry.symbol] = entry
+        share = load.share if load.live and stage == "sustained" else None
+        if share is not None:
+            bound[share.symbol] = share
+        words.append(entry.symbol if share is None else f"{share.symbol}*{entry.symbol}")
+    symbol = f"M_P{letter}{_ENDINGS[stage]}"
+    args: dict[str, Any] = bound
+    if words == [rows[0][1].symbol]:
+        return rows[0][1]
+    return steps.sheet.line(
+        f"{symbol} = {' + '.join(words)}", unit="kN.m", system="kN-m",
+        title="Addition to the moment for all of them", **args,
+    )  # fmt: skip
+
+
+def points_at(loads: Sequence[LocalLoad], l: float, *, halved: bool) -> tuple[Point, ...]:
+    """Return the loads of all stages together as point loads, for curvatures."""
+    made: list[Point] = []
+    for load in loads:
+        if not load.partial:
+            made.append(Point(load.bound["P_s"].value, load.bound["x_P"].value))
+            continue
+        w, start, end = (float(load.bound[name].value) for name in ("w_p", "x_1", "x_2"))
+        middle = l / 2
+        parted = halved and start < middle < end
+        stretches = [(start, middle), (middle, end)] if parted else [(start, end)]
+        for x_1, x_2 in stretches:
+            P = stages.HALF_OF_PARTIAL.function(w, x_2, x_1)
+            made += [Point(P, f.function(x_1, x_2)) for f in _BOTH]
+    return tuple(made)
+
+
+_BOTH = (stages.FIRST_POINT, stages.SECOND_POINT)

@@ -1,0 +1,224 @@
+"""Service moments of one span by stages, with live load where it deflects this span most.
+
+Dead load lies on all spans. Every loaded span moves midspan of the span looked at (the tip of a
+cantilever) up or down; live load is placed on those that move it down. Snow lies on all spans.
+
+Hogging moments are positive here: ``M_h1`` at the left axis, ``M_h2`` at the right axis. N and mm.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+import numpy as np
+
+from lineproof.beams.analysis.arrangements import LIVE, Combination, service_combinations
+from lineproof.beams.analysis.model import Beam, Load, PartialLoad, PointLoad
+from lineproof.beams.analysis.solve import Row, Solution, solve
+from lineproof.errors import UserError
+from lineproof.standards.a23_3 import deflection_stages as clause
+
+Stage = Literal["dead", "sustained", "all"]
+STAGES: tuple[Stage, ...] = ("dead", "sustained", "all")
+FreeEnd = Literal["", "left", "right"]
+"""Which end of a span is free; "" for a span between supports."""
+
+SHARES: Mapping[str, float] = {"L": 0.5, "L_st": 1.0, "S": 0.0}
+"""Share of each load type that is sustained, where nothing else is known: an assumption."""
+SHARE_ASSUMED = "assumed, to be confirmed by the designer"
+_LEFT_OUT = ("W", "E")
+
+
+@dataclass(frozen=True, slots=True)
+class Point:
+    """A point load of a stage [N] at a station from the left axis of its span [mm]."""
+
+    P: float
+    x: float
+
+
+@dataclass(frozen=True, slots=True)
+class StageMoments:
+    """Moments of one stage [N.mm] and the point loads that bend otherwise than a uniform load.
+
+    Of a cantilever only ``M_h1`` counts, at its root; ``M_mb`` and ``M_hb`` are moments of the span
+    behind, at its midspan and at the root. ``earlier`` holds the largest moments reached before at
+    midspan, left and right: a construction stage, or other arrangements.
+    """
+
+    M_m: float
+    M_h1: float
+    M_h2: float
+    points: tuple[Point, ...] = ()
+    M_mb: float = 0.0
+    M_hb: float = 0.0
+    behind: tuple[Point, ...] = ()
+    earlier: tuple[float, float, float] = (0.0, 0.0, 0.0)
+
+
+@dataclass(frozen=True)
+class ServiceMoments:
+    """Service moments of one span at every stage, with the case that gave them.
+
+    ``live_spans`` carry live load. ``factors`` gives the factor of every row of the solution (load
+    type, span) at every stage, for whoever records the statics of it.
+    """
+
+    span: int
+    free: FreeEnd
+    case: str
+    live_spans: tuple[int, ...]
+    factors: Mapping[Stage, Mapping[Row, float]]
+    stages: Mapping[Stage, StageMoments]
+    left_out: tuple[str, ...] = field(default=())
+
+    @property
+    def arrangement(self) -> str:
+        """The spans with live load in words."""
+        if not self.live_spans:
+            return "no live load"
+        word = "span" if len(self.live_spans) == 1 else "spans"
+        return f"live load on {word} {', '.join(map(str, self.live_spans))}"
+
+
+def free_end(beam: Beam, span: int) -> FreeEnd:
+    """Return which end of a span is free."""
+    left, right = beam.supports[span - 1 : span + 1]
+    return "left" if left.kind == "free" else "right" if right.kind == "free" else ""
+
+
+def span_behind(beam: Beam, span: int) -> int | None:
+    """Return the number of the span behind a cantilever, None where its root is fixed.
+
+    Raises :class:`UserError` where nothing but a column holds the root.
+    """
+    free = free_end(beam, span)
+    behind = span + 1 if free == "left" else span - 1
+    root = beam.supports[span if free == "left" else span - 1]
+    if root.kind == "fixed":
+        return None
+    if not 1 <= behind <= len(beam.spans):
+        raise UserError(
+            f"span {span}: a cantilever held by a column alone; the rotation of its root is not "
+            "covered here: write a fixed support or add the span behind it"
+        )
+    return behind
+
+
+def service_moments(
+    beam: Beam,
+    loads: Iterable[Load],
+    span: int,
+    *,
+    shares: Mapping[str, float] = SHARES,
+    solution: Solution | None = None,
+) -> ServiceMoments:
+    """Return the service moments of a span; NBC service combination and arrangement by deflection.
+
+    ``shares`` gives the sustained part of every load type but dead load. Wind and earthquake are
+    left out and named. ``solution`` may be passed on where the loads have been solved before.
+    """
+    kept = tuple(loads)
+    solution = solve(beam, kept) if solution is None else solution
+    free = free_end(beam, span)
+    length = beam.spans[span - 1].length
+    at = 0.0 if free == "left" else length if free == "right" else length / 2
+    moved = solution.span(span).deflection(np.array([at]))[:, 0].tolist()
+    kinds = dict.fromkeys(kind for kind, _ in solution.rows)
+    combinations = service_combinations(kind for kind in kinds if kind not in _LEFT_OUT)
+    tried = [(_placed(solution.rows, moved, c), c.name) for c in combinations]
+    at_all, name = max(
+        tried, key=lambda t: sum(f * y for f, y in zip(t[0].values(), moved, strict=True))
+    )
+    factors = {stage: _of_stage(stage, at_all, shares) for stage in STAGES}
+    return ServiceMoments(
+        span,
+        free,
+        name,
+        tuple(sorted({number for (kind, number), f in at_all.items() if kind in LIVE and f})),
+        {stage: {row: f for row, f in rows.items() if f} for stage, rows in factors.items()},
+        {stage: _moments(solution, kept, span, rows) for stage, rows in factors.items()},
+        tuple(kind for kind in kinds if kind in _LEFT_OUT),
+    )
+
+
+def _placed(
+    rows: Iterable[Row], moved: Iterable[float], combination: Combination
+) -> dict[Row, float]:
+    """Return the factor of every row: live load only where it moves the place down."""
+    factors = dict(combination.factors)
+    return {
+        row: factors.get(row[0], 0.0) if row[0] not in LIVE or y > 0 else 0.0
+        for row, y in zip(rows, moved, strict=True)
+    }
+
+
+def _of_stage(
+    stage: Stage, at_all: Mapping[Row, float], shares: Mapping[str, float]
+) -> dict[Row, float]:
+    def share(kind: str) -> float:
+        if kind == "D" or stage == "all":
+            return 1.0
+        return shares.get(kind, 0.0) if stage == "sustained" else 0.0
+
+    return {row: f * share(row[0]) for row, f in at_all.items()}
+
+
+def _moments(
+    solution: Solution, loads: Iterable[Load], span: int, factors: Mapping[Row, float]
+) -> StageMoments:
+    beam, kept = solution.beam, tuple(loads)
+    rows = np.array([factors[row] for row in solution.rows])
+
+    def at(number: int, part: float) -> float:
+        x = np.array([part * beam.spans[number - 1].length])
+        return float(rows @ solution.span(number).moment(x)[:, 0])
+
+    free = free_end(beam, span)
+    points = local_points(beam, kept, span, factors)
+    if not free:
+        return StageMoments(at(span, 0.5), 0.0 - at(span, 0.0), 0.0 - at(span, 1.0), points)
+    root = 0.0 - at(span, 1.0 if free == "left" else 0.0)
+    behind = span_behind(beam, span)
+    if behind is None:
+        return StageMoments(0.0, root, 0.0, points)
+    at_root = 0.0 - at(behind, 0.0 if free == "left" else 1.0)
+    return StageMoments(
+        0.0, root, 0.0, points, at(behind, 0.5), at_root, local_points(beam, kept, behind, factors)
+    )
+
+
+def local_points(
+    beam: Beam, loads: Iterable[Load], span: int, factors: Mapping[Row, float]
+) -> tuple[Point, ...]:
+    """Return point and partial loads of a span as point loads that deflect it alike."""
+    length = beam.spans[span - 1].length
+    halved = not free_end(beam, span)
+    made: list[Point] = []
+    for load in loads:
+        factor = factors.get((load.kind, load.span), 0.0) if load.span == span else 0.0
+        if factor and isinstance(load, PointLoad):
+            made.append(Point(factor * load.P, load.at))
+        elif factor and isinstance(load, PartialLoad):
+            for start, end in pieces(load.start, load.end, length, halved=halved):
+                made += _two_points(factor * load.w, start, end)
+    return tuple(made)
+
+
+def pieces(
+    start: float, end: float, length: float, *, halved: bool
+) -> tuple[tuple[float, float], ...]:
+    """Return the stretch of a partial load, parted at midspan between supports."""
+    middle = length / 2
+    if halved and start < middle < end:
+        return (start, middle), (middle, end)
+    return ((start, end),)
+
+
+def _two_points(w: float, start: float, end: float) -> tuple[Point, Point]:
+    """Return two point loads that act on any cubic as a uniform load does (Gauss)."""
+    P = clause.HALF_OF_PARTIAL.function(w, end, start)
+    first = clause.FIRST_POINT.function(start, end)
+    return Point(P, first), Point(P, clause.SECOND_POINT.function(start, end))

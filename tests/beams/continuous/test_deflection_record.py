@@ -1,0 +1,238 @@
+"""The record of deflections: equal to the numbers, to be followed by hand, complete."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+from typing import Any
+
+import pytest
+
+from lineproof.beams.analysis.model import Beam, Load, PartialLoad, PointLoad, UniformLoad
+from lineproof.beams.continuous import deflection as numbers
+from lineproof.beams.continuous import deflection_record as record
+from lineproof.beams.continuous.deflection_moments import stage_sums
+from lineproof.beams.continuous.deflection_service import ServiceMoments, service_moments
+from lineproof.record import Record
+from lineproof.sheet import Sheet
+
+from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
+from .deflecting import (
+    F_R,
+    FLOOR,
+    PARTITIONS,
+    beam_of,
+    given_span,
+    record_span,
+    section_of,
+    start_sheet,
+)
+
+EXACT = 1e-9
+UNIFORM: tuple[Load, ...] = tuple(
+    UniformLoad(kind, k, w) for k in (1, 2, 3) for kind, w in (("D", 22.0), ("L", 15.0))
+)
+LOCAL: tuple[Load, ...] = (
+    PointLoad("D", 2, 40e3, 3000), PointLoad("L", 2, 30e3, 6000),
+    PartialLoad("L", 2, 8, 2000, 6000),
+    PointLoad("D", 1, 25e3, 500), PartialLoad("D", 1, 9, 100, 900),
+)  # fmt: skip
+THREE = beam_of([7600, 9200, 7600], ["simple"] * 4)
+TIP_LEFT = beam_of([1800, 9200, 7600], ["free", "simple", "simple", "simple"])
+LONE = beam_of([7600], ["simple"] * 2)
+DOUBLE = numbers.Place(1900, 555, 2500, A_sp=600, d_p=60)
+DEEP_AXIS = numbers.Place(1900, 520, 9000)
+
+
+def alone(loads: Sequence[Load], beam: Beam) -> list[Load]:
+    return [load for load in loads if load.span <= len(beam.spans)]
+
+
+CASES: dict[str, tuple[Beam, int, tuple[Load, ...], dict[str, Any]]] = {
+    "middle span": (THREE, 2, UNIFORM, {}),
+    "end span": (THREE, 1, UNIFORM, {}),
+    "other end span": (THREE, 3, UNIFORM, {}),
+    "simple span": (LONE, 1, UNIFORM, {}),
+    "point and partial loads": (THREE, 2, (*UNIFORM, *LOCAL), {}),
+    "compression bars": (THREE, 2, UNIFORM, {"midspan": DOUBLE}),
+    "axis in the web": (THREE, 2, UNIFORM, {"midspan": DEEP_AXIS}),
+    "not cracked": (THREE, 2, UNIFORM, {"f_r": 10 * F_R}),
+}
+
+
+def recorded(
+    beam: Beam, span: int, loads: Sequence[Load], changes: dict[str, Any], carries: str
+) -> tuple[numbers.Deflections, Record]:
+    """Return a span in numbers and as a record."""
+    section = section_of(beam, span, **changes)
+    service = service_moments(beam, loads, span)
+    sheet = start_sheet(f_r=section.f_r)
+    entries = given_span(sheet, section, span, loads)
+    record_span(sheet, entries, service, carries=carries)
+    return numbers.deflections(section, service.stages, carries=carries), sheet.close()
+
+
+def value(made: Record, entry_id: str) -> float:
+    return float(made.entries[entry_id]["value"])
+
+
+@pytest.mark.parametrize("name", CASES)
+def test_record_equals_the_numbers_and_is_followed_by_hand(name: str) -> None:
+    """Every deflection and inertia to 1e-9; every printed line by calculator."""
+    beam, span, loads, changes = CASES[name]
+    found, made = recorded(beam, span, alone(loads, beam), changes, PARTITIONS)
+    key = f"deflection-{span}"
+
+    for stage, symbol in record.SYMBOLS.items():
+        result = found.stages[stage]
+        assert value(made, f"{key}-{stage}/{symbol}") == pytest.approx(result.delta, rel=EXACT)
+        for name_of, inertia in (
+            ("I_em", result.I_em),
+            ("I_e1", result.I_e1),
+            ("I_e2", result.I_e2),
+        ):
+            if inertia is not None:
+                at = value(made, f"{key}-{stage}/{name_of}")
+                assert at == pytest.approx(inertia, rel=EXACT)
+    for symbol, number in (
+        ("zeta_s", found.zeta_s), ("zeta_sa", found.zeta_sa), ("delta_L", found.live),
+        ("delta_Lr", found.rest_of_live), ("delta_t", found.total), ("delta_at", found.attached),
+        ("delta_max", found.allowed),
+    ):  # fmt: skip
+        assert value(made, f"{key}/{symbol}") == pytest.approx(number, rel=EXACT)
+    check = made.entries[f"{key}/deflection-attached"]
+    assert check["utilisation"] == pytest.approx(found.utilisation, rel=EXACT)
+    assert list(faults(made.data)) == []
+
+
+def test_branches_are_those_meant() -> None:
+    """The cases above reach the web, count compression bars, and stay uncracked."""
+    _, web = recorded(*CASES["axis in the web"], PARTITIONS)
+    _, double = recorded(*CASES["compression bars"], PARTITIONS)
+    _, whole = recorded(*CASES["not cracked"], PARTITIONS)
+
+    assert "deflection-2-sections/kd_wm" in web.entries
+    assert value(double, "deflection-2/rho_p") == pytest.approx(600 / (1900 * 555))
+    assert whole.entries["deflection-2-all/uncracked-m"]["holds"]
+
+
+def tip(sheet: Sheet, loads: Sequence[Load], **choices: Any) -> tuple[Any, Any]:
+    """Record the span behind and the cantilever; return the cantilever in numbers, its record."""
+    back = section_of(TIP_LEFT, 2)
+    behind = service_moments(TIP_LEFT, loads, 2)
+    entries = given_span(sheet, back, 2, loads)
+    record_span(sheet, entries, behind, carries=FLOOR, calculate=True)
+    found = numbers.deflections(back, behind.stages, carries=FLOOR)
+    inertia = {stage: result.I_ea for stage, result in found.stages.items()}
+    section = section_of(TIP_LEFT, 1, behind=numbers.Behind(9200, inertia))
+    service = service_moments(TIP_LEFT, loads, 1)
+    own = given_span(sheet, section, 1, loads)
+    own = replace(
+        own, behind=2, l_behind=sheet.entry("span-2/l"),
+        # live load lies on the cantilever alone: of the span behind only dead load counts
+        local_behind=[load for load in entries.local if not load.live],
+    )  # fmt: skip
+    record_span(sheet, own, service, **choices)
+    return numbers.deflections(section, service.stages, carries=choices["carries"]), sheet.close()
+
+
+@pytest.mark.parametrize("loads", [UNIFORM, (*UNIFORM, *LOCAL)], ids=["uniform", "local"])
+def test_cantilever_with_the_rotation_of_its_root(loads: tuple[Load, ...]) -> None:
+    found, made = tip(start_sheet(), loads, carries=FLOOR, calculate=True)
+
+    for stage, symbol in record.SYMBOLS.items():
+        result, key = found.stages[stage], f"deflection-1-{stage}"
+        assert value(made, f"{key}/theta_r") == pytest.approx(result.theta_r, rel=EXACT)
+        assert value(made, f"{key}/{symbol}") == pytest.approx(result.delta, rel=EXACT)
+    assert "rotation of the root" in made.entries["deflection-1/place"]["text"]
+    assert list(faults(made.data)) == []
+
+
+def test_fixed_root() -> None:
+    beam = beam_of([2500], ["fixed", "free"])
+    found, made = recorded(beam, 1, alone(UNIFORM, beam), {}, PARTITIONS)
+
+    assert value(made, "deflection-1-all/delta_DL") == pytest.approx(
+        found.stages["all"].delta, rel=EXACT
+    )
+    assert list(faults(made.data)) == []
+
+
+def test_deep_span_needs_no_calculation_unless_it_carries_what_is_damaged() -> None:
+    """7600 - 400 = 7200 mm, simple: 7200/16 = 450 < 620; both ends continuous 8800/21 = 419."""
+    _, floor = recorded(*CASES["middle span"], FLOOR)
+    _, attached = recorded(*CASES["middle span"], PARTITIONS)
+
+    assert floor.entries["deflection-2/span-depth"]["holds"]
+    assert value(floor, "deflection-2/h_min") == pytest.approx(8800 / 21)
+    assert "deflection-2/deflection-live" not in floor.entries
+    assert "deflection-2-sections/span-depth" not in attached.entries
+
+
+def test_calculated_all_the_same_the_live_load_is_limited() -> None:
+    section, service = section_of(THREE, 2), service_moments(THREE, UNIFORM, 2)
+    sheet = start_sheet()
+    made = record_span(sheet, given_span(sheet, section, 2), service, carries=FLOOR, calculate=True)
+    found = numbers.deflections(section, service.stages, carries=FLOOR)
+
+    assert made.check.symbol == "deflection-live"
+    assert made.entries["delta_L"].value == pytest.approx(found.live, rel=EXACT)
+    assert sheet.close().entries["deflection-2-sections/span-depth"]["holds"]
+
+
+def test_failing_deflection_fails() -> None:
+    """Four times the load: the check of what is attached fails, and is reported."""
+    heavy = tuple(
+        UniformLoad(x.kind, x.span, 4 * x.w) for x in UNIFORM if isinstance(x, UniformLoad)
+    )
+    found, made = recorded(THREE, 2, heavy, {}, PARTITIONS)
+
+    assert found.utilisation > 1
+    assert made.failed == ["deflection-2/deflection-attached"]
+
+
+def test_stages_as_sums_and_earlier_moments() -> None:
+    """Dead, and dead and live with its share, from six moments; the construction stage governs."""
+    section, service = section_of(THREE, 2), service_moments(THREE, UNIFORM, 2)
+    sheet = start_sheet()
+    entries = given_span(sheet, section, 2)
+    with sheet.part("service", "Service moments"):
+        dead, live = (
+            {
+                n: sheet.given(f"{n}{letter}", f"{of(service, n)} N.mm", unit="kN.m")
+                for n in ("M_m", "M_h1", "M_h2")
+            }
+            for letter, of in (("D", _dead), ("L", _live))
+        )
+        share = sheet.given("r_Ls", "0.5")
+        before = sheet.given("M_c", "150 kN.m", unit="kN.m")
+    moments = stage_sums(dead, live, share, M_aem=before)
+    made = record.record_deflection(sheet, entries, moments, carries=PARTITIONS)
+    stages = {stage: replace(m, earlier=(150e6, 0, 0)) for stage, m in service.stages.items()}
+    found = numbers.deflections(section, stages, carries=PARTITIONS)
+    record_made = sheet.close()
+
+    assert made.entries["delta_at"].value == pytest.approx(found.attached, rel=EXACT)
+    assert value(record_made, "deflection-2-dead/M_am") == pytest.approx(150)
+    assert list(faults(record_made.data)) == []
+
+
+def _dead(service: ServiceMoments, name: str) -> float:
+    return float(getattr(service.stages["dead"], name))
+
+
+def _live(service: ServiceMoments, name: str) -> float:
+    return float(getattr(service.stages["all"], name)) - _dead(service, name)
+
+
+def test_curvature_stands_beside_for_information() -> None:
+    """A found value within its bound, recomputed by its procedure; no check rests on it."""
+    _, made = recorded(*CASES["point and partial loads"], PARTITIONS)
+    entry = made.entries["deflection-2/delta_k"]
+
+    assert entry["kind"] == "found"
+    assert entry["value"] > 0
+    assert entry["closing"]["holds"]
+    assert [e["id"] for e in made.entries.values() if e["kind"] == "check"] == [
+        "deflection-2/deflection-attached"
+    ]
