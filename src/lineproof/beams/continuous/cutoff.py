@@ -1,0 +1,261 @@
+"""Where bars may end: points of no further need, extensions, ends in a tension zone.
+
+``t`` is a distance from the axis of the near support: the one that bottom bars run towards, and
+that top bars run away from.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from typing import Literal
+
+import numpy as np
+
+from lineproof.beams.continuous.anchorage import bar_of, develop, holds, value
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.resistance import (
+    area_for,
+    distance_of,
+    moment_of,
+    provide,
+    section_depth,
+    shear_depth,
+    stand,
+)
+from lineproof.beams.continuous.resistance_cover import ratios, yield_force
+from lineproof.beams.continuous.resistance_demand import (
+    NOTHING,
+    SpanDemand,
+    demand_of,
+    stretch_at,
+)
+from lineproof.standards.a23_3 import cutoff as clause
+
+STEP = 50.0
+"""Ends of bars stand on this module from the axis of a support, to the safe side."""
+DESIGN_STATIONS = 101
+MARGIN = 0.998
+"""Ratio kept at design, so that stations between those looked at are covered too."""
+Zone = Literal["compression", "low shear", "double area", ""]
+"""By which rule of 12.10.5 bars may end at a place; "" for none."""
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Frame:
+    """A beam while its bars are laid, with its demand at the design stations of every span."""
+
+    designed: Designed
+    demands: tuple[SpanDemand, ...]
+
+    @classmethod
+    def of(cls, designed: Designed, count: int = DESIGN_STATIONS) -> Frame:
+        """Return the frame of a beam."""
+        spans = range(1, len(designed.outline.lengths) + 1)
+        return cls(designed, tuple(demand_of(designed, span, count) for span in spans))
+
+
+@dataclass(frozen=True, slots=True)
+class Point:
+    """A point of no further need: distance from the near axis and the case that governs there."""
+
+    t: float
+    row: int
+
+
+def floor50(t: float) -> float:
+    """Return a distance down to the module."""
+    return math.floor(t / STEP + 1e-9) * STEP
+
+
+def ceil50(t: float) -> float:
+    """Return a distance up to the module."""
+    return math.ceil(t / STEP - 1e-9) * STEP
+
+
+def axis_of(designed: Designed, span: int, near: End) -> float:
+    """Return where the axis of the near support stands along the beam."""
+    return designed.outline.axes[span - 1 if near == "left" else span]
+
+
+def along(designed: Designed, span: int, near: End, t: float) -> float:
+    """Return the place along the beam at the distance t from the near axis, into the span."""
+    axis = axis_of(designed, span, near)
+    return axis + t if near == "left" else axis - t
+
+
+def distance(designed: Designed, span: int, near: End, x: float) -> float:
+    """Return the distance from the near axis of a place along the beam."""
+    axis = axis_of(designed, span, near)
+    return x - axis if near == "left" else axis - x
+
+
+def local(designed: Designed, span: int, near: End, t: float) -> float:
+    """Return the station from the left axis of the span."""
+    return t if near == "left" else designed.outline.lengths[span - 1] - t
+
+
+def half_of(designed: Designed, span: int, near: End) -> float:
+    """Return the distance of the near face from the near axis."""
+    return designed.outline.supports[span - 1 if near == "left" else span].half
+
+
+def support_of(span: int, near: End) -> int:
+    """Return the number of the near support."""
+    return span if near == "left" else span + 1
+
+
+def full_moment(designed: Designed, face: Face, span: int, runs: Iterable[BarRun]) -> float:
+    """Return the moment resistance of fully developed bars in a span."""
+    A, lever = full_area(designed, runs)
+    if A == 0:
+        return 0.0
+    d = designed.outline.depths[span - 1] - lever
+    b = designed.outline.widths[span - 1] if face == "bottom" else designed.outline.b_w
+    return float(moment_of(designed, np.array([A]), np.array([d]), np.array([b]))[0])
+
+
+def full_area(designed: Designed, runs: Iterable[BarRun]) -> tuple[float, float]:
+    """Return area of the bars and distance of their centroid from their face."""
+    kept = tuple(runs)
+    A = sum(run.area for run in kept)
+    moment = sum(run.area * distance_of(designed, run) for run in kept)
+    return A, (moment / A if A else 0.0)
+
+
+def moments(designed: Designed, face: Face, span: int, near: End, t: np.ndarray) -> np.ndarray:
+    """Return the moments of all cases (cases, t) of a face, positive where it is in tension."""
+    length = designed.outline.lengths[span - 1]
+    x = t if near == "left" else length - t
+    M, _ = designed.forces.along(span, x)
+    return M if face == "bottom" else -M
+
+
+def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) -> Point | None:
+    """Return from where on the continuing bars of resistance M_r do alone, on whole mm.
+
+    Bottom bars: towards the near support; top bars: away from it, as far as midspan. None where
+    they do alone everywhere (bottom), or not even at midspan (top).
+    """
+    designed = frame.designed
+    demand = frame.demands[span - 1]
+    t = demand.local if near == "left" else designed.outline.lengths[span - 1] - demand.local
+    M = demand.side(face).M
+    order = np.argsort(t)
+    t, M = t[order], M[order]
+    needed = np.flatnonzero(max(M_r, NOTHING) < M)
+    if face == "bottom":
+        if not len(needed):
+            return None
+        first = int(needed[0])
+        return _between(designed, face, span, near, M_r, t[max(first - 1, 0)], t[first])
+    last_half = int(np.searchsorted(t, reach(designed, span), side="right"))
+    needed = needed[needed < last_half]
+    half = half_of(designed, span, near)
+    if not len(needed):
+        return _between(designed, face, span, near, M_r, half, half)
+    last = int(needed[-1])
+    if last + 1 >= min(last_half, len(t)):
+        return None
+    return _between(designed, face, span, near, M_r, t[last], t[last + 1])
+
+
+def reach(designed: Designed, span: int) -> float:
+    """Return how far from its support a top bar belongs to it: half the span, or all of it."""
+    length = designed.outline.lengths[span - 1]
+    return length if designed.cantilever(span) else length / 2
+
+
+def _between(
+    designed: Designed, face: Face, span: int, near: End, M_r: float, a: float, b: float
+) -> Point:
+    """Return the last whole mm between a and b at which M_r still does, from the safe side."""
+    t = np.arange(math.floor(a), math.ceil(b) + 1, dtype=float)
+    t = np.clip(t, 0.0, designed.outline.lengths[span - 1])
+    M = moments(designed, face, span, near, t)
+    needed = M.max(axis=0) > max(M_r, NOTHING)
+    if face == "bottom":
+        index = max(int(np.argmax(needed)) - 1, 0) if needed.any() else len(t) - 1
+    else:
+        index = min(len(t) - int(np.argmax(needed[::-1])), len(t) - 1) if needed.any() else 0
+    return Point(float(t[index]), int(M[:, index].argmax()))
+
+
+def extension(
+    designed: Designed, face: Face, span: int, near: End, t: float, size_d: float
+) -> float:
+    """Return the extension past a point of no further need; ``size_d`` is the bar diameter."""
+    d, d_v = depths(designed, face, span, near)
+    theta = stretch_at(designed, along(designed, span, near, t)).theta
+    return value(clause.EXTENSION, d=d, d_b=size_d, d_v=d_v, theta=theta)
+
+
+def depths(designed: Designed, face: Face, span: int, near: End) -> tuple[float, float]:
+    """Return effective depth and effective shear depth of the section that the bars belong to."""
+    d = section_depth(designed, face, span, support_of(span, near))
+    return d, shear_depth(d, designed.outline.depths[span - 1])
+
+
+def continuing_length(
+    designed: Designed, face: Face, span: int, near: End, runs: Iterable[BarRun]
+) -> float:
+    """Return the length of continuing bars past a point of no further need (12.10.4)."""
+    d, _ = depths(designed, face, span, near)
+    return max(
+        (
+            value(
+                clause.CONTINUING, d=d, d_b=run.diameter,
+                l_d=develop(designed.basis, bar_of(designed, run)).l_d,
+            )
+            for run in runs
+        ),
+        default=0.0,
+    )  # fmt: skip
+
+
+def zone_at(
+    designed: Designed, face: Face, span: int, near: End, t: float, continuing: Sequence[BarRun]
+) -> Zone:
+    """Return by which rule of 12.10.5 bars may end at t, "" where they may not."""
+    M, V = designed.forces.pairs(span, local(designed, span, near, t))
+    M_f = float((M if face == "bottom" else -M).max())
+    if M_f <= NOTHING:
+        return "compression"
+    V_f = float(np.abs(V).max())
+    V_r = stretch_at(designed, along(designed, span, near, t)).V_r
+    if holds(clause.CUT_AT_LOW_SHEAR, V_f=V_f, V_r=V_r):
+        return "low shear"
+    A_co, lever = full_area(designed, continuing)
+    d = designed.outline.depths[span - 1] - lever
+    b = designed.outline.widths[span - 1] if face == "bottom" else designed.outline.b_w
+    double = holds(clause.CUT_AT_DOUBLE_AREA, A_sr=area_for(designed, M_f, d, b), A_co=A_co)
+    if double and holds(clause.CUT_AT_MODERATE_SHEAR, V_f=V_f, V_r=V_r):
+        return "double area"
+    return ""
+
+
+def worst_between(
+    frame: Frame, runs: Sequence[BarRun], face: Face, span: int, bounds: tuple[float, float]
+) -> float:
+    """Return the worst ratio of a face between two places along the beam, at design stations.
+
+    The places where the developed area changes its slope are looked at as well.
+    """
+    designed, demand = frame.designed, frame.demands[span - 1]
+    standing = [s for s in stand(designed, runs) if s.run.face == face]
+    kinks = [
+        x
+        for s in standing
+        for x in (s.run.start, s.run.start + s.rise_start, s.run.end - s.rise_end, s.run.end)
+    ]
+    kinks += demand.side(face).crossings(demand.x)
+    low, high = max(bounds[0], float(demand.x[0])), min(bounds[1], float(demand.x[-1]))
+    inside = [x for x in (low, high, *kinks) if low <= x <= high]
+    kept = demand.x[(demand.x >= low) & (demand.x <= high)]
+    x = np.concatenate([kept, np.array(inside)])
+    side = demand.side(face).between(demand.x, x)
+    provided = provide(designed, standing, face, x, np.full(len(x), span))
+    return float(ratios(side, provided, yield_force(designed)).max())

@@ -1,0 +1,284 @@
+"""The bottom bars of a beam: which run into the supports, which are cut, how they end.
+
+Common practice: the two corner bars run through every span and its supports, lapped there where
+the stock ends; the inner bars of the first layer and those of the second are cut where what is
+left does alone, each at one place a side, unless they save little or must run into the support.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+from itertools import pairwise
+
+from lineproof.beams.bars import BarLayers
+from lineproof.beams.continuous.anchorage import (
+    available,
+    bar_of,
+    develop,
+    has_hooks,
+    holds,
+    hook_at,
+    value,
+)
+from lineproof.beams.continuous.cutoff import (
+    MARGIN,
+    STEP,
+    Frame,
+    Point,
+    along,
+    axis_of,
+    continuing_length,
+    extension,
+    floor50,
+    full_moment,
+    half_of,
+    no_further_need,
+    support_of,
+    worst_between,
+    zone_at,
+)
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.laps import has_room, lap_length, split
+from lineproof.beams.continuous.layout import BarRun, Hook
+from lineproof.beams.continuous.resistance_cover import yield_force
+from lineproof.beams.continuous.resistance_demand import end_tension
+from lineproof.standards.a23_3 import cutoff as clause
+
+CORNERS = 2
+INTO_SUPPORT = 150.0
+LEAST_SAVED = 500.0
+"""Bars are cut only where a cut saves this length at that end."""
+SIDES: tuple[End, End] = ("left", "right")
+
+
+@dataclass(frozen=True, slots=True)
+class Anchored:
+    """How bottom bars end at a support: how many groups run in with the corners, with which hook.
+
+    The groups are, in order, the inner bars of the first layer and the second layer.
+    """
+
+    running_in: int
+    hook: Hook = ""
+
+
+def groups_of(layers: BarLayers) -> tuple[BarRun, ...]:
+    """Return the bars of a span in groups, without their ends: corners, inner bars, layer 2."""
+    first = layers[0]
+    made = [BarRun("bottom", 1, CORNERS, first.size, 0.0, 0.0)]
+    if first.number > CORNERS:
+        made.append(BarRun("bottom", 1, first.number - CORNERS, first.size, 0.0, 0.0))
+    made += [BarRun("bottom", 2, layer.number, layer.size, 0.0, 0.0) for layer in layers[1:]]
+    return tuple(made)
+
+
+def lay_bottom(frame: Frame) -> tuple[BarRun, ...]:
+    """Return all bottom bars of a beam."""
+    designed = frame.designed
+    spans = range(1, len(designed.outline.lengths) + 1)
+    rows = [_lay_span(frame, span) for span in spans]
+    corners = _joined(designed, [row[0] for row in rows])
+    places = designed.outline.axes[1:-1]
+    quarters = [x for span in spans for x in _quarters(designed, span)]
+    made = [piece for run in corners for piece in split(designed, run, places, quarters)]
+    for row in rows:
+        made += [p for run in row[1:] for p in split(designed, run, places, quarters)]
+    return tuple(made)
+
+
+def _quarters(designed: Designed, span: int) -> tuple[float, float]:
+    """Return the quarter points of a clear span, where laps of bottom bars do least harm."""
+    start, end = designed.outline.faces(span)
+    quarter = (end - start) / 4 // STEP * STEP
+    return start + quarter, end - quarter
+
+
+def _lay_span(frame: Frame, span: int) -> tuple[BarRun, ...]:
+    """Return the bars of one span, the corners first; the corners end as if they stood alone."""
+    designed = frame.designed
+    groups = groups_of(designed.bars.bottom[span - 1])
+    groups = tuple(replace(run, serves=f"span {span}") for run in groups)
+    ends = {near: _anchored(designed, span, near, groups) for near in SIDES}
+    runs = list(groups)
+    for near in SIDES:
+        t = support_end(designed, span, near)
+        runs = [_ended(designed, span, near, run, t, ends[near].hook) for run in runs]
+    if designed.cantilever(span):
+        return tuple(runs)
+    for near in SIDES:
+        runs = _cut_side(frame, span, near, runs, ends[near].running_in)
+    return tuple(runs)
+
+
+def support_end(designed: Designed, span: int, near: End) -> float:
+    """Return where bars that run into a support end, from its axis: negative beyond the axis."""
+    support = support_of(span, near)
+    half = half_of(designed, span, near)
+    if not designed.held(support):
+        return designed.end_cover
+    if designed.exterior(support):
+        return designed.end_cover - half
+    return floor50(half - INTO_SUPPORT)
+
+
+def _ended(
+    designed: Designed, span: int, near: End, run: BarRun, t: float, hook: Hook = ""
+) -> BarRun:
+    x = along(designed, span, near, t)
+    if near == "left":
+        return replace(run, start=x, hook_start=hook)
+    return replace(run, end=x, hook_end=hook)
+
+
+def _anchored(designed: Designed, span: int, near: End, groups: Sequence[BarRun]) -> Anchored:
+    """Return how the bars end: as few as hold, straight before hooked."""
+    support = support_of(span, near)
+    if not designed.held(support):
+        return Anchored(len(groups))
+    if not designed.exterior(support):
+        numbers = range(len(groups))
+        return next(
+            (Anchored(n) for n in numbers if _share(designed, support, groups, n)),
+            Anchored(len(groups) - 1),
+        )
+    hooks: tuple[Hook, ...] = ("", "90") if has_hooks(designed) else ("",)
+    for hook in hooks:
+        for n in range(len(groups)):
+            if _share(designed, support, groups, n) and _held(
+                designed, span, near, groups, n, hook
+            ):
+                return Anchored(n, hook)
+    return Anchored(len(groups) - 1, hooks[-1])
+
+
+def _share(designed: Designed, support: int, groups: Sequence[BarRun], n: int) -> bool:
+    """Tell whether enough of the bars run in: a third at simple ends, else a quarter (12.11.1)."""
+    test = clause.INTO_CONTINUOUS_SUPPORT
+    if designed.exterior(support) and designed.outline.supports[support - 1].kind == "simple":
+        test = clause.INTO_SIMPLE_SUPPORT
+    A_s = sum(run.area for run in groups)
+    return holds(test, A_s=A_s, A_se=sum(run.area for run in groups[: n + 1]))
+
+
+def _held(
+    designed: Designed, span: int, near: End, groups: Sequence[BarRun], n: int, hook: Hook
+) -> bool:
+    """Tell whether the bars that run in carry 11.3.9.5 and 12.11.3 at an end support."""
+    support = support_of(span, near)
+    inside = groups[: n + 1]
+    l_av = available(designed, support)
+    lengths = [
+        hook_at(designed, support, run.size).l_dh if hook
+        else develop(designed.basis, bar_of(designed, replace(run, start=0.0, end=1.0))).l_d
+        for run in inside
+    ]  # fmt: skip
+    if hook and max(lengths) > l_av:
+        return False
+    parts = [min(l_av / length, 1.0) for length in lengths]
+    A_sd = sum(run.area * part for run, part in zip(inside, parts, strict=True))
+    if A_sd * yield_force(designed) < end_tension(designed, support):
+        return False
+    if designed.outline.supports[support - 1].kind != "simple":
+        return True
+    return max(lengths) <= limit_at_support(designed, span, near, inside)
+
+
+def limit_at_support(designed: Designed, span: int, near: End, inside: Sequence[BarRun]) -> float:
+    """Return the largest development length of 12.11.3 at a simple support."""
+    V_f, confined = support_shear(designed, span, near)
+    l_a = value(
+        clause.PAST_CENTRE, b_sp=designed.outline.supports[support_of(span, near) - 1].width,
+        c_end=designed.end_cover,
+    )  # fmt: skip
+    formula = clause.LIMIT_CONFINED if confined else clause.LIMIT
+    return value(formula, M_r=full_moment(designed, "bottom", span, inside), V_f=V_f, l_a=l_a)
+
+
+def support_shear(designed: Designed, span: int, near: End) -> tuple[float, bool]:
+    """Return the largest shear at a support axis, and whether a reaction confines the ends.
+
+    It does where the beam is carried from below and no case lifts it.
+    """
+    x = 0.0 if near == "left" else designed.outline.lengths[span - 1]
+    _, V = designed.forces.pairs(span, x, "right" if near == "left" else "left")
+    upward = V if near == "left" else -V
+    direct = designed.outline.supports[support_of(span, near) - 1].carrier in ("column", "wall")
+    return float(abs(V).max()), bool(direct and upward.min() >= 0)
+
+
+def _cut_side(
+    frame: Frame, span: int, near: End, runs: list[BarRun], running_in: int
+) -> list[BarRun]:
+    """Return the runs with those groups cut at one end that may be: layer 2, then inner bars."""
+    made, earlier = list(runs), None
+    for index in range(len(runs) - 1, running_in, -1):
+        continuing = [run for i, run in enumerate(made) if i < index]
+        found = _cut(frame, span, near, made, index, continuing, earlier)
+        if found is None:
+            break
+        made[index], earlier = found
+    return made
+
+
+def _cut(
+    frame: Frame,
+    span: int,
+    near: End,
+    runs: list[BarRun],
+    index: int,
+    continuing: list[BarRun],
+    earlier: Point | None,
+) -> tuple[BarRun, Point] | None:
+    """Return one group cut, with its point of no further need; None where it shall run in."""
+    designed, run = frame.designed, runs[index]
+    point = no_further_need(
+        frame, "bottom", span, near, full_moment(designed, "bottom", span, continuing)
+    )
+    if point is None:
+        return None
+    t = floor50(point.t - extension(designed, "bottom", span, near, point.t, run.diameter))
+    if earlier is not None:
+        t = min(t, floor50(earlier.t - continuing_length(designed, "bottom", span, near, [run])))
+    half = half_of(designed, span, near)
+    middle = sum(designed.outline.faces(span)) / 2
+    face = axis_of(designed, span, near) + (half if near == "left" else -half)
+    bounds = (min(face, middle), max(face, middle))
+    while t - half + INTO_SUPPORT >= LEAST_SAVED:
+        cut = _ended(designed, span, near, run, t)
+        tried = [*runs[:index], cut, *runs[index + 1 :]]
+        allowed = zone_at(designed, "bottom", span, near, t, continuing)
+        if allowed and worst_between(frame, tried, "bottom", span, bounds) <= MARGIN:
+            return cut, point
+        t -= STEP
+    return None
+
+
+def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
+    """Return the corner bars of all spans: like bars run through supports, others are lapped.
+
+    Where there is no room for a lap the bars of both spans end in the support.
+    """
+    made = [corners[0]]
+    for (span, before), (_, after) in pairwise(enumerate(corners, start=1)):
+        axis = designed.outline.axes[span]
+        if before.size == after.size:
+            made[-1] = replace(
+                made[-1], end=after.end, hook_end=after.hook_end, serves=_both(made[-1], after)
+            )
+            continue
+        small = min(before, after, key=lambda run: run.diameter)
+        large = max(before, after, key=lambda run: run.diameter)
+        number = max(designed.bars.bottom[k][0].number for k in (span - 1, span))
+        if has_room(designed, large, number):
+            half = lap_length(designed, replace(small, start=axis - 1, end=axis + 1)) / 2
+            made[-1] = replace(made[-1], end=axis + half)
+            after = replace(after, start=axis - half)  # noqa: PLW2901 - the bar that is lapped
+        made.append(after)
+    return made
+
+
+def _both(before: BarRun, after: BarRun) -> str:
+    first = before.serves.removeprefix("spans ").removeprefix("span ").split(" ")[0]
+    return f"spans {first} to {after.serves.rpartition(' ')[2]}"

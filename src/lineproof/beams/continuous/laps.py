@@ -1,0 +1,81 @@
+"""Laps of bars: where runs longer than the stock are lapped, over which length, with what room."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+
+from lineproof.beams.continuous.anchorage import Bar, bar_of, clear_distance, develop, holds, value
+from lineproof.beams.continuous.cutoff import STEP, ceil50
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.errors import UserError
+from lineproof.standards.a23_3 import bars as bar_clause
+from lineproof.standards.a23_3 import laps as clause
+
+HOOK_LEG = 16.0
+"""Length of a 90 degree hook beyond the outside of the bar, in bar diameters, at most."""
+LEAST_PIECES = 2
+
+
+def lap_length(designed: Designed, run: BarRun) -> float:
+    """Return the length of a class B lap of a run, on the module of the ends."""
+    return ceil50(develop(designed.basis, bar_of(designed, run)).lap / 2) * 2
+
+
+def cut_length(run: BarRun) -> float:
+    """Return the length of a bar before bending, an upper bound."""
+    hooks = sum(1 for hook in (run.hook_start, run.hook_end) if hook)
+    return run.end - run.start + hooks * HOOK_LEG * run.diameter
+
+
+def split(
+    designed: Designed, run: BarRun, places: Sequence[float], others: Sequence[float] = ()
+) -> tuple[BarRun, ...]:
+    """Return a run in pieces of the stock length.
+
+    Laps are centred on one of the ``places`` along the beam, failing that on one of the
+    ``others``, failing that anywhere. Raises :class:`UserError` for bars too thick.
+    """
+    if cut_length(run) <= designed.stock:
+        return (run,)
+    if not holds(clause.LAPPABLE, d_b=run.diameter):
+        raise UserError(
+            f"{run.face} bars {run.number}-{run.size}: {cut_length(run) / 1000:.1f} m is longer "
+            f"than the stock of {designed.stock / 1000:g} m, and {run.size} may not be lapped "
+            "(12.14.2); write bars of 35M or smaller, or a longer stock"
+        )
+    half = ceil50(lap_length(designed, run) / 2)
+    pieces: list[BarRun] = []
+    rest = run
+    while cut_length(rest) > designed.stock:
+        at = _lap_at(designed, rest, (places, others), half)
+        pieces.append(replace(rest, end=at + half, hook_end=""))
+        rest = replace(rest, start=at - half, hook_start="")
+    return (*pieces, rest)
+
+
+def _lap_at(
+    designed: Designed, rest: BarRun, places: Sequence[Sequence[float]], half: float
+) -> float:
+    """Return the centre of the next lap: the furthest place that the stock reaches."""
+    leg = HOOK_LEG * rest.diameter if rest.hook_start else 0.0
+    furthest = min(rest.start + designed.stock - leg - half, rest.end - 3 * half)
+    for group in places:
+        reached = [x for x in group if rest.start + 3 * half <= x <= furthest]
+        if reached:
+            return max(reached)
+    return furthest // STEP * STEP
+
+
+def room_at_lap(designed: Designed, run: BarRun, number: int) -> float:
+    """Return the clear distance where the two corner bars of a layer of ``number`` are lapped."""
+    bar = Bar(run.face, "web", run.layer, run.size, number, designed.outline.depths[0])
+    formula = clause.CLEAR_CORNERS if number > LEAST_PIECES else clause.CLEAR_PAIR
+    return value(formula, s_c=clear_distance(designed.basis, bar), d_b=run.diameter)
+
+
+def has_room(designed: Designed, run: BarRun, number: int) -> bool:
+    """Tell whether concrete can pass between the bars where the corner bars are lapped."""
+    s_min = value(bar_clause.LEAST_CLEAR, d_b=run.diameter, a_max=designed.strengths.a_max)
+    return holds(clause.ROOM, s_min=s_min, s_cl=room_at_lap(designed, run, number))

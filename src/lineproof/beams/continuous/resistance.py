@@ -1,0 +1,220 @@
+"""Resistance of the bars as detailed along a beam: every bar counted as far as it is developed.
+
+The stress of a bar rises in proportion to the distance from its end, over its development length
+(with a hook: over that of the hook, from the outside of the hook; at a lap of like bars: over the
+lap, so that two lapped bars count as one). Compression bars are not counted.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from lineproof.beams.analysis.curves import Floats
+from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.continuous.anchorage import bar_of, develop, hook_at, value
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
+from lineproof.standards.a23_3 import bars as bar_clause
+from lineproof.standards.a23_3 import shear
+from lineproof.standards.a23_3.bars import BARS
+
+LONGITUDINAL = ("bottom", "top")
+
+
+@dataclass(frozen=True, slots=True)
+class Standing:
+    """A run with what its resistance needs: lengths over which its stress rises, at either end.
+
+    ``distance`` is that of the bar centres from the face of the bars.
+    """
+
+    run: BarRun
+    rise_start: float
+    rise_end: float
+    distance: float
+    lap_start: bool
+    lap_end: bool
+
+    def developed(self, x: Floats) -> Floats:
+        """Return the part of the yield strength that the bars reach at the stations x."""
+        from_start = (x - self.run.start) / self.rise_start
+        from_end = (self.run.end - x) / self.rise_end
+        part: Floats = np.clip(np.minimum(from_start, from_end), 0.0, 1.0)
+        return part
+
+
+def alike(a: BarRun, b: BarRun) -> bool:
+    """Tell whether two runs are the same bars, one behind the other."""
+    return (a.face, a.layer, a.place, a.size, a.number) == (
+        b.face,
+        b.layer,
+        b.place,
+        b.size,
+        b.number,
+    )
+
+
+def lapped(first: BarRun, second: BarRun) -> bool:
+    """Tell whether the end of one run laps the start of the other, like bars in line."""
+    return alike(first, second) and first.start < second.start < first.end < second.end
+
+
+def distance_of(designed: Designed, run: BarRun) -> float:
+    """Return the distance of the centres of a run's bars from their face."""
+    c_c = designed.outline.cover
+    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
+    if run.layer == 1:
+        return c_c + d_bs + run.diameter / 2
+    d_b = max(layer.diameter for layer in _first_layers(designed, run))
+    thicker = max(d_b, run.diameter)
+    s_l = value(bar_clause.LAYER_DISTANCE, d_b=thicker, a_max=designed.strengths.a_max)
+    return c_c + d_bs + d_b + s_l + run.diameter / 2
+
+
+def _first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
+    axes = designed.outline.axes
+    if run.face == "bottom":
+        places = zip(axes[:-1], axes[1:], designed.bars.bottom, strict=True)
+        met = [row for a, b, row in places if run.start < b and run.end > a]
+    else:
+        tops = (top.web for top in designed.bars.top)
+        met = [row for x, row in zip(axes, tops, strict=True) if run.start <= x <= run.end]
+    two = [row[0] for row in met if len(row) > 1]
+    return two or [row[0] for row in met if row] or [BarLayer(2, run.size)]
+
+
+def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
+    """Return the runs with the lengths over which their stress rises."""
+    kept = [run for run in runs if run.place != "side face"]
+    made = []
+    for run in kept:
+        bar = develop(designed.basis, bar_of(designed, run))
+        lap_start = any(lapped(other, run) for other in kept)
+        lap_end = any(lapped(run, other) for other in kept)
+        made.append(
+            Standing(
+                run,
+                _rise(designed, run, run.hook_start, 1, bar.lap if lap_start else bar.l_d),
+                _rise(designed, run, run.hook_end, 0, bar.lap if lap_end else bar.l_d),
+                distance_of(designed, run), lap_start, lap_end,
+            )
+        )  # fmt: skip
+    return tuple(made)
+
+
+def _rise(designed: Designed, run: BarRun, hook: str, support: int, straight: float) -> float:
+    if not hook:
+        return straight
+    return hook_at(designed, support or len(designed.outline.supports), run.size).l_dh
+
+
+def effective_depth(designed: Designed, layers: BarLayers, h: float) -> float:
+    """Return the effective depth of layers counted in full."""
+    face: Face = "bottom"
+    total = moment = 0.0
+    for number, layer in enumerate(layers, start=1):
+        run = BarRun(face, number, layer.number, layer.size, 0.0, 0.0)
+        away = _distance_in(designed, run, layers)
+        total += layer.area
+        moment += layer.area * (h - away)
+    return moment / total
+
+
+def _distance_in(designed: Designed, run: BarRun, layers: BarLayers) -> float:
+    c_c = designed.outline.cover
+    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
+    if run.layer == 1:
+        return c_c + d_bs + run.diameter / 2
+    d_b = layers[0].diameter
+    s_l = value(
+        bar_clause.LAYER_DISTANCE, d_b=max(d_b, run.diameter), a_max=designed.strengths.a_max
+    )
+    return c_c + d_bs + d_b + s_l + run.diameter / 2
+
+
+def section_depth(designed: Designed, face: Face, span: int, support: int = 0) -> float:
+    """Return the effective depth of the bars below a span, or above a support in that span."""
+    h = designed.outline.depths[span - 1]
+    if face == "bottom":
+        return effective_depth(designed, designed.bars.bottom[span - 1], h)
+    web = designed.bars.top[support - 1].web or (BarLayer(2, designed.bars.holders),)
+    return effective_depth(designed, web, h)
+
+
+def shear_depth(d: float, h: float) -> float:
+    """Return the effective shear depth."""
+    return value(shear.D_V, d=d, h=h)
+
+
+def moment_of(designed: Designed, A: Floats, d: Floats, b: Floats) -> Floats:
+    """Return the moment resistance of developed bars of area A at depth d; web and flange b."""
+    s, outline = designed.strengths, designed.outline
+    stress = s.alpha_1 * s.phi_c * s.f_c
+    force = s.phi_s * s.f_y * A
+    whole = force / (stress * b)
+    flange = stress * (b - outline.b_w) * outline.h_f
+    web = (force - flange) / (stress * outline.b_w)
+    tee = flange * (d - outline.h_f / 2) + (force - flange) * (d - web / 2)
+    made: Floats = np.where(whole <= outline.h_f, force * (d - whole / 2), tee)
+    if outline.h_f == 0:
+        made = force * (d - whole / 2)
+    return np.where(A > 0, made, 0.0)
+
+
+def area_for(designed: Designed, M: float, d: float, b: float) -> float:
+    """Return the area of bars that a moment requires; infinite where the concrete is too small."""
+    s, outline = designed.strengths, designed.outline
+    if M <= 0:
+        return 0.0
+    stress, b_w, h_f = s.alpha_1 * s.phi_c * s.f_c, outline.b_w, outline.h_f
+    flange = 0.0
+    if b > b_w and stress * b * h_f * (d - h_f / 2) < M:
+        flange = stress * (b - b_w) * h_f
+        M, b = M - flange * (d - h_f / 2), b_w
+    under = d * d - 2 * M / (stress * b)
+    if under < 0:
+        return float("inf")
+    return float((flange + stress * b * (d - under**0.5)) / (s.phi_s * s.f_y))
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Provided:
+    """What stands at stations: area counted as developed, its depth, its moment resistance."""
+
+    A: Floats
+    d: Floats
+    M_r: Floats
+
+
+def provide(
+    designed: Designed,
+    standing: Iterable[Standing],
+    face: Face,
+    x: Floats,
+    span: Sequence[int] | Floats,
+) -> Provided:
+    """Return what the bars of a face provide at stations x that lie in the spans named."""
+    outline = designed.outline
+    index = np.asarray(span, dtype=int) - 1
+    h = np.array(outline.depths)[index]
+    A = np.zeros_like(x)
+    lever = np.zeros_like(x)
+    for bars in standing:
+        if bars.run.face == face:
+            part = bars.run.area * bars.developed(x)
+            A += part
+            lever += part * bars.distance
+    d = h - np.divide(lever, A, out=np.zeros_like(x), where=A > 0)
+    widths = np.array(outline.widths)[index] if face == "bottom" else np.full_like(x, outline.b_w)
+    return Provided(A, d, moment_of(designed, A, d, widths))
+
+
+def span_at(outline: BeamOutline, x: float) -> int:
+    """Return the span that a place along the beam lies in; at an axis, the one on its right."""
+    for span, end in enumerate(outline.axes[1:], start=1):
+        if x < end:
+            return span
+    return len(outline.lengths)

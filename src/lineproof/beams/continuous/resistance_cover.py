@@ -1,0 +1,230 @@
+"""Whether the bars as detailed carry every load case at every station; where they do not."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from lineproof.beams.analysis.arrangements import LoadCase
+from lineproof.beams.analysis.curves import Floats
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.resistance import Provided, Standing, provide, stand
+from lineproof.beams.continuous.resistance_demand import (
+    NOTHING,
+    Side,
+    SpanDemand,
+    demand_at,
+    demand_of,
+    stations,
+)
+
+FACES: tuple[Face, Face] = ("bottom", "top")
+COUNT = 1000
+ROUND_OFF = 1e-9
+
+
+@dataclass(frozen=True, slots=True)
+class Station:
+    """One station of one face: moment and tension against what the developed bars carry.
+
+    ``x`` along the beam, ``local`` from the left axis of the span; N, mm. ``row`` and ``case``
+    are those of the larger of the two ratios.
+    """
+
+    face: Face
+    span: int
+    x: float
+    local: float
+    M_f: float
+    M_r: float
+    F: float
+    F_r: float
+    row: int
+    case: LoadCase
+
+    @property
+    def ratio(self) -> float:
+        """The larger of both ratios; infinite where bars are needed and none counts."""
+        return max(_ratio(self.M_f, self.M_r), _ratio(self.F, self.F_r))
+
+    @property
+    def by_tension(self) -> bool:
+        """Whether the tension with shear governs, not the moment alone."""
+        return _ratio(self.F, self.F_r) > _ratio(self.M_f, self.M_r)
+
+
+@dataclass(frozen=True, slots=True)
+class Gap:
+    """A stretch along the beam in which the bars of a face do not carry what they must."""
+
+    face: Face
+    span: int
+    start: float
+    end: float
+    worst: float
+
+    def __str__(self) -> str:
+        """Say where it is."""
+        ratio = "no bars count there" if self.worst == np.inf else f"{self.worst:.2f} of what holds"
+        return (
+            f"{self.face} bars, span {self.span}: not enough from {self.start:.0f} to "
+            f"{self.end:.0f} mm along the beam ({ratio})"
+        )
+
+
+@dataclass(frozen=True, slots=True)
+class Coverage:
+    """The worst station of every face and span, and the gaps."""
+
+    worst: Station
+    stations: tuple[Station, ...]
+    gaps: tuple[Gap, ...]
+
+    @property
+    def holds(self) -> bool:
+        """Whether no station is uncovered."""
+        return not self.gaps
+
+
+def _ratio(demand: float, provided: float) -> float:
+    if demand <= NOTHING:
+        return 0.0
+    return demand / provided if provided > 0 else float("inf")
+
+
+def ratios(side: Side, provided: Provided, force: float) -> Floats:
+    """Return demand over resistance at every station; ``force`` is that of 1 mm2 at yield."""
+    F_r = provided.A * force
+    made: Floats = np.maximum(_ratios(side.M, provided.M_r), _ratios(side.F, F_r))
+    return made
+
+
+def _ratios(demand: Floats, provided: Floats) -> Floats:
+    needed = demand > NOTHING
+    with np.errstate(divide="ignore", invalid="ignore"):
+        made: Floats = np.where(needed, np.where(provided > 0, demand / provided, np.inf), 0.0)
+    return made
+
+
+def yield_force(designed: Designed) -> float:
+    """Return the factored force of 1 mm2 of bars at yield [N]."""
+    return designed.strengths.phi_s * designed.strengths.f_y
+
+
+def covered(designed: Designed, runs: Iterable[BarRun], count: int = COUNT) -> Coverage:
+    """Compare what every load case asks with the developed bars at ``count`` stations a span."""
+    standing = stand(designed, runs)
+    worst: list[Station] = []
+    gaps: list[Gap] = []
+    for span in range(1, len(designed.outline.lengths) + 1):
+        demand = demand_of(designed, span, count)
+        for face in FACES:
+            provided = provide(designed, standing, face, demand.x, np.full(len(demand.x), span))
+            ratio = ratios(demand.side(face), provided, yield_force(designed))
+            worst.append(_station(designed, demand, face, provided, int(ratio.argmax())))
+            gaps += _gaps(demand, face, ratio)
+    governing = max(worst, key=lambda s: s.ratio)
+    return Coverage(governing, tuple(worst), tuple(gaps))
+
+
+def station_at(
+    designed: Designed, standing: Sequence[Standing], demand: SpanDemand, face: Face, index: int
+) -> Station:
+    """Return one station of a span's demand with what the bars carry there."""
+    x = demand.x[index : index + 1]
+    provided = provide(designed, standing, face, x, [demand.span])
+    one = Provided(
+        *(np.repeat(values, index + 1) for values in (provided.A, provided.d, provided.M_r))
+    )
+    return _station(designed, demand, face, one, index)
+
+
+def _station(
+    designed: Designed, demand: SpanDemand, face: Face, provided: Provided, index: int
+) -> Station:
+    side = demand.side(face)
+    M_f, F = float(side.M[index]), float(side.F[index])
+    M_r, F_r = float(provided.M_r[index]), float(provided.A[index]) * yield_force(designed)
+    by_moment = _ratio(M_f, M_r) >= _ratio(F, F_r)
+    row = int(side.M_row[index] if by_moment else side.F_row[index])
+    return Station(
+        face, demand.span, float(demand.x[index]), float(demand.local[index]), M_f, M_r, F, F_r,
+        row, designed.forces.cases[row],
+    )  # fmt: skip
+
+
+def _gaps(demand: SpanDemand, face: Face, ratio: Floats) -> list[Gap]:
+    """Return the stretches in which the ratio exceeds 1."""
+    bad = np.flatnonzero(ratio > 1 + ROUND_OFF)
+    if not len(bad):
+        return []
+    breaks = np.flatnonzero(np.diff(bad) > 1)
+    firsts = [int(bad[0]), *(int(bad[i + 1]) for i in breaks)]
+    lasts = [*(int(bad[i]) for i in breaks), int(bad[-1])]
+    return [
+        Gap(
+            face, demand.span, float(demand.x[a]), float(demand.x[b]), float(ratio[a : b + 1].max())
+        )
+        for a, b in zip(firsts, lasts, strict=True)
+    ]
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Diagram:
+    """Arrays along the beam for the moment diagram: x [mm], moments [N.mm], top ones negative.
+
+    ``M_max`` and ``M_min`` are the envelopes, ``M_r_pos`` and ``M_r_neg`` the resistance of the
+    bars as detailed, ``M_t_pos`` and ``M_t_neg`` the moments that the tension with shear stands
+    for: moments at which the bars just carry it.
+    """
+
+    x: Floats
+    M_max: Floats
+    M_min: Floats
+    M_r_pos: Floats
+    M_r_neg: Floats
+    M_t_pos: Floats
+    M_t_neg: Floats
+
+
+def diagram(designed: Designed, runs: Iterable[BarRun], count: int = 101) -> Diagram:
+    """Return envelopes and resistance along the beam, with stations at the ends of all bars."""
+    kept = tuple(runs)
+    standing = stand(designed, kept)
+    columns: list[tuple[Floats, ...]] = []
+    for span in range(1, len(designed.outline.lengths) + 1):
+        demand = _with_bar_ends(designed, standing, span, count)
+        spans = np.full(len(demand.x), span)
+        pos, neg = (provide(designed, standing, face, demand.x, spans) for face in FACES)
+        columns.append(
+            (
+                demand.x, demand.bottom.M, -demand.top.M, pos.M_r, -neg.M_r,
+                _as_moment(demand.bottom, pos, designed), -_as_moment(demand.top, neg, designed),
+            )
+        )  # fmt: skip
+    return Diagram(*(np.concatenate(rows) for rows in zip(*columns, strict=True)))
+
+
+def _with_bar_ends(
+    designed: Designed, standing: Sequence[Standing], span: int, count: int
+) -> SpanDemand:
+    local = stations(designed, span, count)
+    axis = designed.outline.axes[span - 1]
+    kinks = [
+        x - axis
+        for s in standing
+        for x in (s.run.start, s.run.start + s.rise_start, s.run.end - s.rise_end, s.run.end)
+    ]
+    inner = [x for x in kinks if local[0] < x < local[-1]]
+    return demand_at(designed, span, np.unique(np.concatenate([local, inner])))
+
+
+def _as_moment(side: Side, provided: Provided, designed: Designed) -> Floats:
+    """Return the moment with the lever arm of the bars as they stand."""
+    F_r = provided.A * yield_force(designed)
+    arm = np.divide(provided.M_r, F_r, out=np.zeros_like(F_r), where=F_r > 0)
+    made: Floats = np.maximum(side.F * arm, np.maximum(side.M, 0.0))
+    return made
