@@ -15,6 +15,7 @@ from typing import Literal
 import numpy as np
 
 from lineproof.beams.analysis.arrangements import LIVE, Combination, service_combinations
+from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.analysis.model import Beam, Load, PartialLoad, PointLoad
 from lineproof.beams.analysis.solve import Row, Solution, solve
 from lineproof.errors import UserError
@@ -133,13 +134,17 @@ def service_moments(
         tried, key=lambda t: sum(f * y for f, y in zip(t[0].values(), moved, strict=True))
     )
     factors = {stage: _of_stage(stage, at_all, shares) for stage in STAGES}
+    rows = _rows_of(solution, span, free)
     return ServiceMoments(
         span,
         free,
         name,
         tuple(sorted({number for (kind, number), f in at_all.items() if kind in LIVE and f})),
-        {stage: {row: f for row, f in rows.items() if f} for stage, rows in factors.items()},
-        {stage: _moments(solution, kept, span, rows) for stage, rows in factors.items()},
+        {
+            stage: {row: f for row, f in all_rows.items() if f}
+            for stage, all_rows in factors.items()
+        },
+        {stage: _moments(beam, kept, rows, factors[stage]) for stage in STAGES},
         tuple(kind for kind in kinds if kind in _LEFT_OUT),
     )
 
@@ -167,27 +172,47 @@ def _of_stage(
 
 
 def _moments(
-    solution: Solution, loads: Iterable[Load], span: int, factors: Mapping[Row, float]
+    beam: Beam, loads: Iterable[Load], rows: _Rows, factors: Mapping[Row, float]
 ) -> StageMoments:
-    beam, kept = solution.beam, tuple(loads)
-    rows = np.array([factors[row] for row in solution.rows])
-
-    def at(number: int, part: float) -> float:
-        x = np.array([part * beam.spans[number - 1].length])
-        return float(rows @ solution.span(number).moment(x)[:, 0])
-
-    free = free_end(beam, span)
-    points = local_points(beam, kept, span, factors)
-    if not free:
-        return StageMoments(at(span, 0.5), 0.0 - at(span, 0.0), 0.0 - at(span, 1.0), points)
-    root = 0.0 - at(span, 1.0 if free == "left" else 0.0)
-    behind = span_behind(beam, span)
-    if behind is None:
+    kept, numbers = tuple(loads), np.array(list(factors.values()))
+    values = (numbers @ rows.moments).tolist()
+    points = local_points(beam, kept, rows.span, factors)
+    if not rows.free:
+        M_m, left, right = values
+        return StageMoments(M_m, 0.0 - left, 0.0 - right, points)
+    root = 0.0 - values[0]
+    if rows.behind is None:
         return StageMoments(0.0, root, 0.0, points)
-    at_root = 0.0 - at(behind, 0.0 if free == "left" else 1.0)
-    return StageMoments(
-        0.0, root, 0.0, points, at(behind, 0.5), at_root, local_points(beam, kept, behind, factors)
-    )
+    behind = local_points(beam, kept, rows.behind, factors)
+    return StageMoments(0.0, root, 0.0, points, values[1], 0.0 - values[2], behind)
+
+
+@dataclass(frozen=True, eq=False)
+class _Rows:
+    """Moments that count for one span, by row of the solution: (rows, places).
+
+    Midspan, left and right axis; of a cantilever its root, then midspan and root behind.
+    """
+
+    span: int
+    free: FreeEnd
+    behind: int | None
+    moments: Floats
+
+
+def _rows_of(solution: Solution, span: int, free: FreeEnd) -> _Rows:
+    def at(number: int, *parts: float) -> Floats:
+        x = np.array(parts) * solution.beam.spans[number - 1].length
+        return solution.span(number).moment(x)
+
+    if not free:
+        return _Rows(span, free, None, at(span, 0.5, 0.0, 1.0))
+    root = 1.0 if free == "left" else 0.0
+    behind = span_behind(solution.beam, span)
+    own = at(span, root)
+    if behind is None:
+        return _Rows(span, free, None, own)
+    return _Rows(span, free, behind, np.hstack([own, at(behind, 0.5, 1.0 - root)]))
 
 
 def local_points(
