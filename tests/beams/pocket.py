@@ -33,6 +33,7 @@ FACTORS: dict[str, dict[str, Fraction]] = {
     "kN-m": {
         "": Fraction(1), "m": Fraction(1), "kN": Fraction(1), "kN.m": Fraction(1),
         "kN/m": Fraction(1), "kPa": Fraction(1), "kN/m3": Fraction(1), "mm": Fraction(1, 1000),
+        "kN.m2": Fraction(1),
     },
 }  # fmt: skip
 
@@ -53,6 +54,8 @@ def _value(node: ast.expr, args: Mapping[str, str]) -> Number:
             return Fraction(repr(constant))
         case ast.Name(id=name):
             return Fraction(args[name])
+        case ast.UnaryOp(op=ast.USub(), operand=operand):
+            return -_value(operand, args)
         case ast.BinOp(left, ast.Pow(), right):
             base, power = _value(left, args), _value(right, args)
             whole = isinstance(power, Fraction) and power.denominator == 1
@@ -102,7 +105,7 @@ def faults(data: Mapping[str, Any]) -> Iterator[str]:
             elif entry["kind"] in ("check", "decision"):
                 yield from _comparison(entry["id"], entry, entry["system"])
             elif entry["kind"] == "found":
-                yield from _comparison(entry["id"], entry["closing"], "N-mm")
+                yield from _comparison(entry["id"], entry["closing"], entry["closing"].get("system", "N-mm"))
 
 
 def _line(entry: Mapping[str, Any]) -> Iterator[str]:

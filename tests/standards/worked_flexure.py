@@ -219,6 +219,16 @@ CRACKS = (
     W("crack_control.D_S", {"h": 600, "d": 536.1}, "600 - 536.1 = 63.9", CHECK_7),
     W("crack_control.BAR_COUNT", {"A_s": 2000, "A_b": 500}, "2000/500 = 4", CHECK_7),
     W(
+        "crack_control.TENSION_AREA_T",
+        {"d_s": 51, "b_w": 380, "b_ot": 380, "n_z": 10},
+        "2*51*(380 + 760)/10 = 11628",
+    ),
+    W(
+        "crack_control.TENSION_AREA_L",
+        {"d_s": 51, "b_w": 380, "b_ot": 380, "n_z": 8},
+        "2*51*(380 + 380)/8 = 9690",
+    ),
+    W(
         "crack_control.TENSION_AREA",
         {"d_s": 63.9, "b_w": 350, "n_z": 4},
         "2*63.9*350/4 = 11182.5",

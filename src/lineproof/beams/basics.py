@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import Protocol
+
 from lineproof.beams.bottom_bars import BARS
 from lineproof.beams.flexure import YIELD_CLAUSE, confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
@@ -89,27 +91,44 @@ def _record_modulus(sheet: Sheet, density: str) -> None:
         sheet.line(materials.E_C_GENERAL)
 
 
+class Exposed(Protocol):
+    """What cover rests on: exposure class, fire rating and type of concrete, a slab or none."""
+
+    exposure: str
+    fire_rating: str
+    fire_aggregate: str
+
+    @property
+    def slab(self) -> bool:
+        """Whether the beam has a flange."""
+
+
 def record_cover(sheet: Sheet, inputs: FloorBeamInputs) -> None:
     """Record cover for durability and for fire of the stirrups and the bottom bars."""
     with sheet.part(COVER, "Cover for durability and fire"):
         bars_entries = sheet.entries_of(BARS)
         diameters = [bars_entries[n] for n in ("d_b", "d_b2") if n in bars_entries]
         thickest = max(diameters, key=lambda entry: entry.value)
-        steps = Steps(sheet, {"d_bs": bars_entries["d_bs"], "d_b": thickest})
-        steps.line(cover.COVER_TO_BARS)
-        for column in ("f_cmin", "c_min", "r_cb", "r_ca"):
-            sheet.lookup(column, cover.EXPOSURES, inputs.exposure)
-        steps.check(cover.STRONG_ENOUGH)
-        steps.line(cover.COVER_REQUIRED_STIRRUP)
-        steps.check(cover.DURABLE)
-        steps.line(cover.COVER_REQUIRED_BAR)
-        steps.check(cover.DURABLE_BAR)
-        sheet.lookup("c_fire", cover.FIRE_COVER, inputs.fire_rating)
-        steps.check(cover.FIRE_SAFE)
-        steps.check(_width_for_fire(float(inputs.fire_rating.split()[0])))
-        if inputs.slab:
-            sheet.lookup("h_fire", cover.FIRE_SLAB, inputs.fire_rating, inputs.fire_aggregate)
-            steps.check(cover.FIRE_SAFE_SLAB)
+        cover_inside(Steps(sheet, {"d_bs": bars_entries["d_bs"], "d_b": thickest}), inputs)
+
+
+def cover_inside(steps: Steps, inputs: Exposed) -> None:
+    """Record cover inside the open part; d_bs and d_b stand for stirrup and thickest bar."""
+    sheet = steps.sheet
+    steps.line(cover.COVER_TO_BARS)
+    for column in ("f_cmin", "c_min", "r_cb", "r_ca"):
+        sheet.lookup(column, cover.EXPOSURES, inputs.exposure)
+    steps.check(cover.STRONG_ENOUGH)
+    steps.line(cover.COVER_REQUIRED_STIRRUP)
+    steps.check(cover.DURABLE)
+    steps.line(cover.COVER_REQUIRED_BAR)
+    steps.check(cover.DURABLE_BAR)
+    sheet.lookup("c_fire", cover.FIRE_COVER, inputs.fire_rating)
+    steps.check(cover.FIRE_SAFE)
+    steps.check(_width_for_fire(float(inputs.fire_rating.split()[0])))
+    if inputs.slab:
+        sheet.lookup("h_fire", cover.FIRE_SLAB, inputs.fire_rating, inputs.fire_aggregate)
+        steps.check(cover.FIRE_SAFE_SLAB)
 
 
 def record_bar_cover(steps: Steps) -> None:

@@ -20,21 +20,26 @@ def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) 
     """
     origin = "chosen: few sizes, one layer before two, then least mass" if chosen else "given"
     with sheet.part(BARS, "Bottom bars and effective depth"):
-        sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.", title="Bars")
-        first = layers[0]
-        sheet.lookup("d_bs", bars.BARS, stirrup, "d_b")
-        sheet.lookup("r_s", bars.STIRRUP_BENDS, stirrup)
-        d_b = sheet.lookup("d_b", bars.BARS, first.size)
-        A_b = sheet.lookup("A_b", bars.BARS, first.size)
-        n_1 = sheet.given("n_1", str(first.number), source=origin)
-        s_min = sheet.line(bars.LEAST_CLEAR)
-        s_c = sheet.line(bars.CLEAR, n_b=n_1)
-        sheet.check(bars.FITS)
-        A_s1 = sheet.line(bars.AREA_OF_BARS, symbol="A_s1" if len(layers) > 1 else "", n_b=n_1)
-        if len(layers) == 1:
-            return sheet.line(bars.DEPTH_ONE_LAYER)
-        d_1 = sheet.line(bars.DEPTH_FIRST)
-        return _record_second_layer(sheet, layers, origin, (d_b, A_b, s_min, s_c, A_s1, d_1))
+        return bars_inside(sheet, layers, stirrup=stirrup, origin=origin)
+
+
+def bars_inside(sheet: Sheet, layers: BarLayers, *, stirrup: str, origin: str) -> Entry:
+    """Record bottom bars inside the open part; return the effective depth."""
+    sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.", title="Bars")
+    first = layers[0]
+    sheet.lookup("d_bs", bars.BARS, stirrup, "d_b")
+    sheet.lookup("r_s", bars.STIRRUP_BENDS, stirrup)
+    d_b = sheet.lookup("d_b", bars.BARS, first.size)
+    A_b = sheet.lookup("A_b", bars.BARS, first.size)
+    n_1 = sheet.given("n_1", str(first.number), source=origin)
+    s_min = sheet.line(bars.LEAST_CLEAR)
+    s_c = sheet.line(bars.CLEAR, n_b=n_1)
+    sheet.check(bars.FITS)
+    A_s1 = sheet.line(bars.AREA_OF_BARS, symbol="A_s1" if len(layers) > 1 else "", n_b=n_1)
+    if len(layers) == 1:
+        return sheet.line(bars.DEPTH_ONE_LAYER)
+    d_1 = sheet.line(bars.DEPTH_FIRST)
+    return _record_second_layer(sheet, layers, origin, (d_b, A_b, s_min, s_c, A_s1, d_1))
 
 
 def _record_second_layer(

@@ -9,6 +9,7 @@ from lineproof.beams.bars import BarLayers
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import FloorBeamInputs
 from lineproof.beams.steps import Steps
+from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars
@@ -21,23 +22,32 @@ SKIN_BAR = "10M"
 def record_cracks(sheet: Sheet, inputs: FloorBeamInputs, layers: BarLayers) -> None:
     """Record z at midspan and the skin reinforcement of deep beams."""
     steps = midspan(sheet, inputs.shape)
-    kind = "interior" if inputs.exposure == "N" else "exterior"
     with sheet.part(CRACKS, "Crack control and skin reinforcement"):
-        largest = max(layers, key=lambda layer: layer.diameter)
-        if largest is not layers[0]:
-            steps.bind(A_b=sheet.lookup("A_b", bars.BARS, largest.size))
-        steps.lines(
-            clause.STRESS_ALLOWANCE,
-            clause.D_C,
-            clause.D_S,
-            clause.BAR_COUNT,
-            clause.TENSION_AREA,
-            clause.Z,
-        )
-        sheet.lookup("z_max", clause.LIMITS, kind)
-        steps.check(clause.CRACKS)
-        if steps.decide(clause.NEEDS_SKIN):
-            _record_skin(sheet, steps, kind)
+        cracks_inside(steps, inputs.exposure, layers)
+        skin_inside(steps, inputs.exposure)
+
+
+def exposure_kind(exposure: str) -> str:
+    """Return the row of the limits for an exposure class."""
+    return "interior" if exposure == "N" else "exterior"
+
+
+def cracks_inside(
+    steps: Steps, exposure: str, layers: BarLayers, area: Formula = clause.TENSION_AREA
+) -> None:
+    """Record z inside the open part, with the concrete in tension by ``area``."""
+    largest = max(layers, key=lambda layer: layer.diameter)
+    if largest is not layers[0]:
+        steps.bind(A_b=steps.sheet.lookup("A_b", bars.BARS, largest.size))
+    steps.lines(clause.STRESS_ALLOWANCE, clause.D_C, clause.D_S, clause.BAR_COUNT, area, clause.Z)
+    steps.sheet.lookup("z_max", clause.LIMITS, exposure_kind(exposure))
+    steps.check(clause.CRACKS)
+
+
+def skin_inside(steps: Steps, exposure: str) -> None:
+    """Record the skin reinforcement inside the open part, if the beam is that deep."""
+    if steps.decide(clause.NEEDS_SKIN):
+        _record_skin(steps.sheet, steps, exposure_kind(exposure))
 
 
 def _record_skin(sheet: Sheet, steps: Steps, kind: str) -> None:

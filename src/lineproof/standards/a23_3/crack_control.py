@@ -7,6 +7,7 @@ from functools import partial
 from lineproof.formula import FROM_MEMORY, criterion, formula
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.notation import NOTATION
+from lineproof.standards.references import MECHANICS
 
 _formula = partial(formula, notation=NOTATION)
 _criterion = partial(criterion, notation=NOTATION)
@@ -54,6 +55,18 @@ TENSION_AREA = _formula(
     clause="10.6.1",
     title="Concrete in tension around each bar, same centroid as the bars",
     basis=FROM_MEMORY,
+)
+TENSION_AREA_T = _formula(
+    "A_e = 2*d_s*(b_w + 2*b_ot)/n_z",
+    clause="10.6.1",
+    title="Concrete in tension around each top bar, web and both overhangs",
+    basis=MECHANICS,
+)
+TENSION_AREA_L = _formula(
+    "A_e = 2*d_s*(b_w + b_ot)/n_z",
+    clause="10.6.1",
+    title="Concrete in tension around each top bar, web and overhang",
+    basis=MECHANICS,
 )
 Z = _formula(
     "z = f_s*(d_c*A_e)**(1/3)",
@@ -145,6 +158,8 @@ FORMULAS = (
     D_S,
     BAR_COUNT,
     TENSION_AREA,
+    TENSION_AREA_T,
+    TENSION_AREA_L,
     Z,
     SKIN_HEIGHT,
     SKIN_WIDTH,

@@ -1,0 +1,213 @@
+"""Choosing bars alike over the beam: one size for all bottom bars, one for all top bars.
+
+The order, for bottom and for top bars apart: one size for the whole beam where one can do; as few
+sections with a second layer as can be; least mass; fewest bars. Sizes from 15M to 35M are tried
+(common practice). Where no size does for all sections, each section takes its own best.
+"""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Callable, Iterable, Sequence
+from dataclasses import dataclass
+
+from lineproof.beams.bars import BarLayer, BarLayers, in_line
+from lineproof.beams.choice import MOST_BARS, SIZES, bars_for
+from lineproof.beams.continuous.numbers import Numbers, value
+from lineproof.beams.continuous.section_checks import (
+    Checks,
+    Rules,
+    bottom_checks,
+    fails,
+    top_checks,
+)
+from lineproof.errors import FaultList
+from lineproof.standards.a23_3 import minimum
+
+
+@dataclass(frozen=True, slots=True)
+class Section:
+    """A section whose bars are chosen: its name, its numbers, the length its bars run over [mm].
+
+    Several sets of numbers stand for the faces that the same bars serve.
+    """
+
+    name: str
+    numbers: tuple[Numbers, ...]
+    length: float
+
+
+@dataclass(frozen=True, slots=True)
+class TopBars:
+    """Top bars: those within the web, and how many in each overhang."""
+
+    web: BarLayer
+    overhang: int
+    sides: int
+
+    @property
+    def area(self) -> float:
+        """Area of all of them [mm2]."""
+        return self.web.area + self.sides * self.overhang * self.web.area / self.web.number
+
+    def __str__(self) -> str:
+        """Show as written: ``4-20M, 2-20M in each overhang``."""
+        if not self.overhang:
+            return str(self.web)
+        where = "each overhang" if self.sides > 1 else "the overhang"
+        return f"{self.web}, {self.overhang}-{self.web.size} in {where}"
+
+
+Bars = BarLayers | TopBars
+
+
+@dataclass(frozen=True, slots=True)
+class Chosen:
+    """Bars chosen for one section and the utilisation of every check of its worst face."""
+
+    section: str
+    bars: Bars
+    checks: Checks
+
+    @property
+    def governing(self) -> tuple[str, float]:
+        """The check that comes nearest to its limit."""
+        key = max(self.checks, key=lambda k: self.checks[k])
+        return key, self.checks[key]
+
+
+Trial = Callable[[Section, str], tuple[Chosen | None, str]]
+"""Find the best bars of one size for a section, or say which check stopped them."""
+
+
+def choose(sections: Sequence[Section], trial: Trial, what: str) -> tuple[Chosen, ...]:
+    """Return bars for every section by the stated order; raises :class:`UserError` if none do."""
+    found: dict[str, list[Chosen | None]] = {}
+    stopped: dict[str, Counter[str]] = {section.name: Counter() for section in sections}
+    for size in SIZES:
+        row = []
+        for section in sections:
+            chosen, why = trial(section, size)
+            row.append(chosen)
+            if chosen is None:
+                stopped[section.name][why] += 1
+        found[size] = row
+    alike = [[c for c in row if c is not None] for row in found.values()]
+    whole = [row for row in alike if len(row) == len(sections)]
+    if whole:
+        return tuple(min(whole, key=lambda row: order(row, sections)))
+    return tuple(_each_its_own(sections, found, stopped, what))
+
+
+def order(row: Iterable[Chosen], sections: Iterable[Section]) -> tuple[int, float, int]:
+    """Return what is least in the best choice: second layers, mass, bars."""
+    pairs = list(zip(row, sections, strict=True))
+    second = sum(isinstance(c.bars, tuple) and len(c.bars) > 1 for c, _ in pairs)
+    mass = sum(_area(c.bars) * s.length for c, s in pairs)
+    return second, round(mass, 3), sum(_number(c.bars) for c, _ in pairs)
+
+
+def _area(bars: Bars) -> float:
+    return bars.area if isinstance(bars, TopBars) else sum(layer.area for layer in bars)
+
+
+def _number(bars: Bars) -> int:
+    if isinstance(bars, TopBars):
+        return bars.web.number + bars.sides * bars.overhang
+    return sum(layer.number for layer in bars)
+
+
+def _each_its_own(
+    sections: Sequence[Section],
+    found: dict[str, list[Chosen | None]],
+    stopped: dict[str, Counter[str]],
+    what: str,
+) -> Iterable[Chosen]:
+    faults = FaultList()
+    for place, section in enumerate(sections):
+        own = [row[place] for row in found.values()]
+        able = [chosen for chosen in own if chosen is not None]
+        if able:
+            yield min(able, key=lambda c: order([c], [section]))
+            continue
+        why = "; ".join(text for text, _ in stopped[section.name].most_common(3))
+        faults.add(
+            f"{what}: no bars pass every check at {section.name}: stopped by {why}; write a deeper "
+            "or wider beam, or stronger concrete"
+        )
+    faults.raise_if_any()
+
+
+def bottom_trial(rules: Rules, stirrup: str) -> Trial:
+    """Return the search for the least bottom bars of one size."""
+
+    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+        why: Counter[str] = Counter()
+        for layers in _bottom_layouts(size):
+            checks = bottom_checks(dict(section.numbers[0]), rules, layers, stirrup)
+            if not fails(checks):
+                return Chosen(section.name, layers, checks), ""
+            why[worst_of(checks)] += 1
+        return None, why.most_common(1)[0][0]
+
+    return trial
+
+
+def _bottom_layouts(size: str) -> list[BarLayers]:
+    """Return layouts of one size, one layer before two, least bars first."""
+    made: list[BarLayers] = [(BarLayer(n, size),) for n in range(2, MOST_BARS + 1)]
+    two = [
+        (BarLayer(n, size), BarLayer(m, size))
+        for n in range(2, MOST_BARS + 1)
+        for m in range(2, n + 1)
+        if in_line(n, m)
+    ]
+    return made + sorted(two, key=lambda pair: (pair[0].number + pair[1].number, pair[1].number))
+
+
+def top_trial(rules: Rules, stirrup: str) -> Trial:
+    """Return the search for the least top bars of one size; each face must pass."""
+    sides = {"T": 2, "L": 1, "rectangular": 0}[rules.shape]
+
+    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+        why: Counter[str] = Counter()
+        for bars in _top_layouts(section, size, sides):
+            faces = [
+                top_checks(dict(at), rules, bars.web, bars.overhang, stirrup)
+                for at in section.numbers
+            ]
+            checks = max(faces, key=lambda face: max(face.values()))
+            if not fails(checks):
+                return Chosen(section.name, bars, checks), ""
+            why[worst_of(checks)] += 1
+        return None, why.most_common(1)[0][0]
+
+    return trial
+
+
+_MORE_BESIDE = 5
+"""Bars that an overhang may hold beyond what it needs, where the web is full."""
+
+
+def _top_layouts(section: Section, size: str, sides: int) -> list[TopBars]:
+    """Return layouts of one size, least area first, then most bars within the web."""
+    least = 0
+    if sides:
+        least = max(bars_for(_spread(at), size) for at in section.numbers)
+    made = [
+        TopBars(BarLayer(n, size), beside, sides)
+        for n in range(2, MOST_BARS + 1)
+        for beside in (range(least, least + _MORE_BESIDE) if sides else (0,))
+    ]
+    return sorted(made, key=lambda bars: (bars.area, bars.overhang))
+
+
+def _spread(at: Numbers) -> float:
+    """Return the area that an overhang needs [mm2], from the clause itself."""
+    width = value(minimum.SPREAD_WIDTH, at)
+    return value(minimum.SPREAD_AREA, at | {"b_ot": width})
+
+
+def worst_of(checks: Checks) -> str:
+    """Return the key of the check that fails by most."""
+    return max(checks, key=lambda key: checks[key])

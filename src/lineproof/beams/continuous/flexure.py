@@ -1,0 +1,382 @@
+"""Flexure at every span and both faces of every support: numbers for the choice, then lines."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+
+from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bottom_bars import bars_inside
+from lineproof.beams.continuous.bar_choice import (
+    Chosen,
+    Section,
+    TopBars,
+    bottom_trial,
+    choose,
+    top_trial,
+)
+from lineproof.beams.continuous.case_forces import record_forces
+from lineproof.beams.continuous.forces import Demand, End, other
+from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.model import GIVEN, Model
+from lineproof.beams.continuous.numbers import Numbers
+from lineproof.beams.continuous.restraint import record_restraint, restraint_moment
+from lineproof.beams.continuous.section_checks import (
+    SPREAD_AREAS,
+    TENSION_AREAS,
+    TENSION_WIDTHS,
+    Rules,
+    bottom_checks,
+    top_checks,
+)
+from lineproof.beams.cracks import cracks_inside, exposure_kind, skin_inside
+from lineproof.beams.flexure import confirmed_value, record_yield, required, resistance
+from lineproof.beams.minimum_steel import minimum_of
+from lineproof.beams.second_path import record_proof
+from lineproof.beams.section import zone_of
+from lineproof.beams.steps import Steps
+from lineproof.errors import FaultList
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import analysis, bars, crack_control, flexure, minimum
+from lineproof.standards.codes import CodePair
+
+_LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
+_MATERIALS = (
+    "phi_c", "phi_s", "f_c", "f_y", "E_s", "eps_cu", "lambda_", "alpha_1", "beta_1", "f_r", "E_c",
+    "c_c", "a_max", "b_w",
+)  # fmt: skip
+CHOSEN = "chosen: one size for the beam, few second layers, then least mass"
+
+
+@dataclass(frozen=True, slots=True)
+class Face:
+    """A face of a support, in the span it belongs to."""
+
+    support: int
+    side: End
+
+    @property
+    def span(self) -> int:
+        """The span that the face belongs to."""
+        return self.support - 1 if self.side == "left" else self.support
+
+    @property
+    def near(self) -> End:
+        """The end of that span at which it lies."""
+        return other(self.side)
+
+    @property
+    def key(self) -> str:
+        """Key of its part."""
+        return f"hog-{self.support}-{self.side}"
+
+    @property
+    def name(self) -> str:
+        """Its name in words."""
+        return f"support {self.support}, {self.side} face"
+
+
+def faces_of(model: Model) -> list[Face]:
+    """Return all faces of the beam from left to right."""
+    return [
+        Face(support, side)
+        for support in range(1, model.spans + 2)
+        for side in ("left", "right")
+        if model.forces.has_span(support, side)
+    ]
+
+
+def sagging_spans(model: Model) -> list[int]:
+    """Return the spans that have a moment with the bottom in tension: all but cantilevers."""
+    return [k for k in range(1, model.spans + 1) if not model.forces.beam.cantilever(k)]
+
+
+def nominally_simple(model: Model, face: Face) -> bool:
+    """Tell whether a face is at an end support that is analysed as simple."""
+    kind = model.inputs.supports[face.support - 1].kind
+    return kind == "simple" and face.support in (1, model.spans + 1) and not _hung(model, face)
+
+
+def _hung(model: Model, face: Face) -> bool:
+    """Tell whether the span of a face is a cantilever."""
+    return model.forces.beam.cantilever(face.span)
+
+
+# -- numbers ---------------------------------------------------------------------------------
+
+
+def materials_of(model: Model, pair: CodePair) -> Numbers:
+    """Return materials and limits as numbers, from the sheet."""
+    sheet = model.sheet
+    at = {name: sheet.find(name).value for name in _MATERIALS}
+    if model.inputs.slab:
+        at["h_f"] = sheet.find("h_f").value
+    value = confirmed_value(sheet.project, pair)
+    at["c_d"] = flexure.YIELD_LIMIT.function(at["f_y"]) if value is None else float(value["value"])
+    at["z_max"] = crack_control.LIMITS.number(exposure_kind(model.inputs.exposure), "z_max")
+    return at
+
+
+def numbers_in(model: Model, materials: Mapping[str, float], span: int) -> Numbers:
+    """Return materials and geometry of a span as numbers."""
+    place = span_place(model.sheet, model.inputs, span)
+    at = dict(materials) | {name: entry.value for name, entry in place.items()}
+    at["b"] = at.get("b_f", at["b_w"])
+    return at
+
+
+def rules_of(model: Model) -> Rules:
+    """Return the choices that the checks of a section depend on."""
+    return Rules(model.inputs.shape, model.inputs.minimum_rule)
+
+
+def choose_bottom(model: Model, pair: CodePair) -> dict[int, Chosen]:
+    """Return the bottom bars of every span, given or chosen; raises :class:`UserError`."""
+    rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
+    made: dict[int, Chosen] = {}
+    sections: dict[int, Section] = {}
+    for span in sagging_spans(model):
+        at = numbers_in(model, materials, span) | {"M_f": model.forces.sag(span).M}
+        given = model.inputs.bottom_bars[span - 1]
+        if given is not None:
+            made[span] = Chosen(f"span {span}", given, bottom_checks(at, rules, given, stirrup))
+        else:
+            sections[span] = Section(f"span {span}", (at,), model.lengths[span - 1].value)
+    found = choose(list(sections.values()), bottom_trial(rules, stirrup), "bottom_bars")
+    return made | dict(zip(sections, found, strict=True))
+
+
+def choose_top(model: Model, pair: CodePair) -> dict[int, Chosen]:
+    """Return the top bars of every support that has a moment with the top in tension."""
+    rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
+    made: dict[int, Chosen] = {}
+    sections: dict[int, Section] = {}
+    for support, numbers in _top_numbers(model, materials).items():
+        given = model.inputs.top_bars[support - 1]
+        name = f"support {support}"
+        section = Section(name, tuple(numbers), _top_length(model, support))
+        if given is None:
+            sections[support] = section
+            continue
+        bars_given = given_top(model, given[0], section)
+        faces = [
+            top_checks(dict(at), rules, bars_given.web, bars_given.overhang, stirrup)
+            for at in numbers
+        ]
+        worst = max(faces, key=lambda face: max(face.values()))
+        made[support] = Chosen(name, bars_given, worst)
+    found = choose(list(sections.values()), top_trial(rules, stirrup), "top_bars")
+    return made | dict(zip(sections, found, strict=True))
+
+
+def given_top(model: Model, web: BarLayer, section: Section) -> TopBars:
+    """Return given top bars with the bars of the same size that the overhangs need."""
+    sides = {"T": 2, "L": 1, "rectangular": 0}[model.inputs.shape]
+    if not sides:
+        return TopBars(web, 0, 0)
+    needed = max(
+        minimum.SPREAD_AREA.function(minimum.SPREAD_WIDTH.function(at["b_o"], at["l"]), at["h_f"])
+        for at in section.numbers
+    )
+    one = web.area / web.number
+    return TopBars(web, int(-(-needed // one)), sides)
+
+
+def _top_numbers(model: Model, materials: Mapping[str, float]) -> dict[int, list[Numbers]]:
+    made: dict[int, list[Numbers]] = {}
+    for face in faces_of(model):
+        M_f = hogging(model, face)
+        if M_f > 0:
+            at = numbers_in(model, materials, face.span) | {"M_f": M_f}
+            made.setdefault(face.support, []).append(at)
+    return made
+
+
+def hogging(model: Model, face: Face) -> float:
+    """Return the design moment of a face, top in tension; at most 0 where there is none [N.mm]."""
+    if nominally_simple(model, face):
+        return restraint_moment(model, face.support, face.span)
+    return -model.forces.hog(face.support, face.side).M
+
+
+def _top_length(model: Model, support: int) -> float:
+    """Return about how long the top bars of a support are [mm]: a third of each span beside it."""
+    beside = [k for k in (support - 1, support) if 1 <= k <= model.spans]
+    return float(sum(model.lengths[k - 1].value for k in beside)) / 3
+
+
+# -- lines -----------------------------------------------------------------------------------
+
+
+def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> None:
+    """Record a span's largest moment, its bottom bars, their resistance and all checks."""
+    sheet, inputs = model.sheet, model.inputs
+    demand = model.forces.sag(span)
+    origin = "given" if inputs.bottom_bars[span - 1] is not None else CHOSEN
+    with sheet.part(f"sag-{span}", f"Span {span}: moment in the span"):
+        steps = _steps(model, span, "b_f" if inputs.slab else "b_w")
+        record_forces(steps, model, demand, _nearer(model, demand))
+        bars_inside(sheet, layers, stirrup=inputs.stirrup, origin=origin)
+        _take(steps, _LAYERS)
+        required(steps, inputs.shape)
+        steps.check(flexure.ENOUGH_STEEL)
+        M_r = resistance(steps, inputs.shape)
+        record_yield(steps, pair)
+        steps.check(flexure.STRENGTH)
+        case = "two layers" if len(layers) > 1 else "one layer"
+        record_proof(steps, (zone_of(inputs.shape), case), M_r)
+        minimum_of(
+            steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
+        )
+        cracks_inside(steps, inputs.exposure, layers)
+        skin_inside(steps, inputs.exposure)
+
+
+def _steps(model: Model, span: int, width: str) -> Steps:
+    """Return steps in a span whose compression zone has the width ``b_f`` or ``b_w``."""
+    sheet = model.sheet
+    place = span_place(sheet, model.inputs, span)
+    b_w = sheet.entry(f"{GIVEN}/b_w")
+    place |= {"b_w": b_w, "b": place.get(width, b_w)}
+    if model.inputs.slab:
+        place["h_f"] = sheet.entry(f"{GIVEN}/h_f")
+    sheet.stand_for(place)
+    return Steps(sheet, place)
+
+
+def _take(steps: Steps, names: tuple[str, ...]) -> None:
+    """Let symbols stand for what has just been recorded in the open part."""
+    made = steps.sheet.part_entries
+    steps.bind(**{name: made[name] for name in names if name in made})
+
+
+def _nearer(model: Model, demand: Demand) -> End:
+    half = model.lengths[demand.span - 1].value / 2
+    return "left" if demand.x <= half * (1 + 1e-9) else "right"
+
+
+def record_hog(model: Model, support: int, top: TopBars | None, pair: CodePair) -> None:
+    """Record both faces of a support: moments, top bars, resistance and all checks.
+
+    The second face of one depth has the same section: there the resistance is taken over.
+    """
+    faces = [face for face in faces_of(model) if face.support == support]
+    faces.sort(key=lambda face: -hogging(model, face))
+    worst: dict[str, Entry] = {}
+    for face in faces:
+        with model.sheet.part(face.key, f"{face.name.capitalize()}: moment over the support"):
+            if hogging(model, face) <= 0 or top is None:
+                _record_no_moment(model, face)
+            elif worst and _same_section(model, faces[0], face):
+                _record_other_face(model, face, worst)
+            else:
+                worst = _record_face(model, face, top, pair)
+
+
+def _same_section(model: Model, first: Face, second: Face) -> bool:
+    depths = model.inputs.depths
+    return depths[first.span - 1].value == depths[second.span - 1].value
+
+
+def _record_no_moment(model: Model, face: Face) -> None:
+    carrier = model.inputs.supports[face.support - 1].carrier
+    rests = nominally_simple(model, face)
+    text = (
+        f"The beam rests freely on the {carrier}: no moment arises; bars that hold the stirrups "
+        "run through."
+        if rests
+        else "No load case brings tension to the top here; bars that hold the stirrups run through."
+    )
+    model.sheet.note("no-moment", text, title="Top bars", basis="common practice")
+
+
+def _record_demand(steps: Steps, model: Model, face: Face) -> None:
+    if nominally_simple(model, face):
+        record_restraint(steps, model, face.support, face.span)
+        return
+    sheet = model.sheet
+    x = sheet.line(analysis.TO_FACE, b_sn=sheet.entry(f"{GIVEN}/b_s{face.support}"))
+    demand = model.forces.hog(face.support, face.side)
+    record_forces(steps, model, demand, face.near, x=x)
+
+
+def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict[str, Entry]:
+    """Record a face in full; return its resistance and bars for the other face."""
+    sheet, inputs = model.sheet, model.inputs
+    steps = _steps(model, face.span, "b_w")
+    _record_demand(steps, model, face)
+    steps.place.pop("h_f", None)
+    _record_top_bars(steps, model, face, top)
+    required(steps, "rectangular")
+    steps.check(flexure.ENOUGH_STEEL)
+    M_r = resistance(steps, "rectangular")
+    record_yield(steps, pair)
+    steps.check(flexure.STRENGTH)
+    record_proof(steps, ("rectangle", "one layer"), M_r)
+    minimum_of(
+        steps, inputs.minimum_rule, minimum.BY_CRACKING_TOP, TENSION_WIDTHS[inputs.shape],
+        waivable=True,
+    )  # fmt: skip
+    if inputs.slab:
+        steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
+        steps.check(minimum.SPREAD)
+    cracks_inside(steps, inputs.exposure, (top.web,), TENSION_AREAS[inputs.shape])
+    _take(steps, ("M_r", "A_s", "d", "n_o", "A_b"))
+    made = sheet.part_entries
+    return {name: made[name] for name in ("M_r", "A_s", "d", "n_o", "A_b") if name in made}
+
+
+def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> None:
+    sheet, inputs = model.sheet, model.inputs
+    given = inputs.top_bars[face.support - 1] is not None
+    origin = "given" if given else CHOSEN
+    sheet.note("bars-text", f"Top bars: {top}, {origin}.", title="Bars")
+    entries = {
+        "d_bs": sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b"),
+        "r_s": sheet.lookup("r_s", bars.STIRRUP_BENDS, inputs.stirrup),
+        "d_b": sheet.lookup("d_b", bars.BARS, top.web.size),
+        "A_b": sheet.lookup("A_b", bars.BARS, top.web.size),
+        "n_t": sheet.given("n_t", str(top.web.number), source=origin),
+    }
+    entries["n_b"] = entries["n_t"]
+    if inputs.slab:
+        entries["n_o"] = sheet.given("n_o", str(top.overhang), source=origin)
+    steps.bind(**entries)
+    steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
+    steps.check(bars.FITS)
+    steps.lines(SPREAD_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
+
+
+def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry]) -> None:
+    """Record the moment of the milder face against the resistance of the same bars."""
+    steps = _steps(model, face.span, "b_w")
+    _record_demand(steps, model, face)
+    steps.bind(**dict(worst))
+    steps.check(flexure.STRENGTH)
+    if model.inputs.slab:
+        steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
+        steps.check(minimum.SPREAD)
+
+
+def refuse_failing(chosen: Mapping[int, Chosen], what: str) -> None:
+    """Refuse given bars that do not fit into the web: nothing could be printed of them."""
+    faults = FaultList()
+    for made in chosen.values():
+        unfit = [
+            key for key in (bars.FITS.key, bars.FITS_SECOND.key) if made.checks.get(key, 0) > 1
+        ]
+        if unfit:
+            shown = " / ".join(map(str, made.bars)) if isinstance(made.bars, tuple) else made.bars
+            faults.add(
+                f"{what}: {shown} do not fit into the web at {made.section}; write fewer or larger "
+                "bars, or a wider web"
+            )
+    faults.raise_if_any()
+
+
+def places(model: Model) -> Iterator[str]:
+    """Give the keys of all parts of flexure, in their order."""
+    for span in sagging_spans(model):
+        yield f"sag-{span}"
+    for face in faces_of(model):
+        yield face.key

@@ -1,0 +1,96 @@
+"""Moment at an end support that is analysed as simple but cast with what carries the beam.
+
+The restraint that exists is assumed by the coefficients of 9.3.3 for an exterior support: 1/24 of
+w l^2 with a girder (a spandrel), 1/16 with a column. On a wall the beam rests freely.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from lineproof.beams.continuous.case_forces import factor_text
+from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.symbols import code, stated
+from lineproof.beams.steps import Steps
+from lineproof.formula import COMMON_PRACTICE
+from lineproof.record import Entry
+from lineproof.standards.nbc import loads
+
+SHARES: Mapping[str, float] = {"girder": 24.0, "column": 16.0}
+_FORMULAS = {"girder": loads.MOMENT_END_GIRDER, "column": loads.MOMENT_END_COLUMN}
+_TEXT = (
+    "The beam is analysed as simply supported here but cast with a {carrier} that restrains its "
+    "end; the restraint is assumed by the coefficient of clause 9.3.3 for an exterior support."
+)
+
+
+def _worst_case(model: Model, span: int) -> tuple[float, int]:
+    """Return the largest load on a span [N/mm], single loads smeared, and the row of its case."""
+    return max(
+        ((_load(model, span, row), row) for row in range(len(model.forces.cases))),
+        key=lambda pair: (round(pair[0], 9), -pair[1]),
+    )
+
+
+def _load(model: Model, span: int, row: int) -> float:
+    length = model.lengths[span - 1].value
+    factors = {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
+    total = sum(
+        f * model.uniform[kind, span].value
+        for kind, f in factors.items()
+        if (kind, span) in model.uniform
+    )
+    for load in model.on_span(span):
+        size = load.size.value
+        if load.at is None and load.start is not None and load.end is not None:
+            size *= load.end.value - load.start.value
+        total += 2 * factors.get(load.kind, 0.0) * size / length
+    return total
+
+
+def restraint_moment(model: Model, support: int, span: int) -> float:
+    """Return the moment of restraint [N.mm]; zero where the beam rests freely."""
+    share = SHARES.get(model.inputs.supports[support - 1].carrier)
+    if share is None:
+        return 0.0
+    w_f, _ = _worst_case(model, span)
+    length: float = model.lengths[span - 1].value
+    return w_f * length * length / share
+
+
+def record_restraint(steps: Steps, model: Model, support: int, span: int) -> None:
+    """Record the load and the moment of restraint inside the open part; bind M_f."""
+    sheet = model.sheet
+    carrier = model.inputs.supports[support - 1].carrier
+    sheet.note("restraint", _TEXT.format(carrier=carrier), title="Restraint", basis=COMMON_PRACTICE)
+    _, row = _worst_case(model, span)
+    case = str(model.forces.cases[row])
+    terms, bound = _terms(model, span, row)
+    bound["l"] = model.lengths[span - 1]
+    text = f"w_f = {' + '.join(terms)}"
+    names = {n: e for n, e in bound.items() if n in stated(text).names}
+    smeared = ", single loads smeared" if model.on_span(span) else ""
+    w_f = sheet.line(stated(text), title=f"Load on span {span}{smeared}: {case}", **_only(names))
+    steps.bind(w_f=w_f, l=model.lengths[span - 1])
+    steps.line(_FORMULAS[carrier])
+
+
+def _only(names: Mapping[str, Entry]) -> dict[str, object]:
+    return dict(names)
+
+
+def _terms(model: Model, span: int, row: int) -> tuple[list[str], dict[str, Entry]]:
+    factors = {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
+    terms, bound = [], {}
+    for kind, factor in factors.items():
+        if (kind, span) in model.uniform:
+            name = f"w_{code(kind)}{span}"
+            bound[name] = model.uniform[kind, span]
+            terms.append(f"{factor_text(factor)}*{name}")
+    for load in model.on_span(span):
+        if load.kind in factors:
+            n, factor = load.number, factor_text(factors[load.kind])
+            bound |= load.entries
+            size = f"P_x{n}" if load.at is not None else f"w_x{n}*(e_x{n} - s_x{n})"
+            terms.append(f"2*{factor}*{size}/l")
+    return terms, bound

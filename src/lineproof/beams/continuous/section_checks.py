@@ -1,0 +1,159 @@
+"""The checks of bars at one section on plain numbers, for choosing bars and for cures.
+
+The same catalogue formulas are recorded for the bars chosen: a choice never rests on a second,
+shorter version of a formula.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation, value
+from lineproof.beams.inputs import Shape
+from lineproof.formula import Formula
+from lineproof.standards.a23_3 import bars, crack_control, flexure, minimum
+from lineproof.standards.a23_3.bars import BARS
+
+Checks = dict[str, float]
+"""Utilisation of each check by its key: at most 1 where it holds."""
+
+SPREAD_AREAS: Mapping[Shape, Formula] = {
+    "T": bars.TOP_AREA_T, "L": bars.TOP_AREA_L, "rectangular": bars.TOP_AREA_RECTANGULAR,
+}  # fmt: skip
+TENSION_WIDTHS: Mapping[Shape, Formula] = {
+    "T": minimum.WIDTH_FLANGE_T,
+    "L": minimum.WIDTH_FLANGE_L,
+    "rectangular": minimum.WIDTH_WEB,
+}
+TENSION_AREAS: Mapping[Shape, Formula] = {
+    "T": crack_control.TENSION_AREA_T,
+    "L": crack_control.TENSION_AREA_L,
+    "rectangular": crack_control.TENSION_AREA,
+}
+NO_YIELD = 2.0
+"""Utilisation told where the block would leave the section: no bars can do."""
+
+
+@dataclass(frozen=True, slots=True)
+class Rules:
+    """Choices of the calculation that the checks of a section depend on."""
+
+    shape: Shape
+    minimum_rule: str
+    waivable: bool = True
+
+
+def _put_layer(at: Numbers, layer: BarLayer, stirrup: str) -> None:
+    at["d_bs"] = BARS.number(stirrup, "d_b")
+    at["r_s"] = bars.STIRRUP_BENDS.number(stirrup, "r_s")
+    at["d_b"], at["A_b"] = layer.diameter, BARS.number(layer.size, "A_b")
+    at["n_b"] = at["n_1"] = float(layer.number)
+
+
+def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
+    """Put bottom bars into the numbers: areas and depths; return whether they fit."""
+    first = layers[0]
+    _put_layer(at, first, stirrup)
+    put(at, bars.LEAST_CLEAR, bars.CLEAR)
+    made = {bars.FITS.key: utilisation(bars.FITS, at)}
+    if len(layers) == 1:
+        put(at, bars.AREA_OF_BARS, bars.DEPTH_ONE_LAYER)
+        return made
+    second = layers[1]
+    at["A_s1"] = value(bars.AREA_OF_BARS, at)
+    put(at, bars.DEPTH_FIRST)
+    at["d_b2"] = second.diameter
+    upper = at | {"d_b": second.diameter, "n_b": float(second.number)}
+    at["s_min2"] = value(bars.LEAST_CLEAR, upper)
+    at["s_c2"] = value(bars.CLEAR, upper)
+    at["s_l"] = value(bars.LAYER_DISTANCE, at | {"d_b": max(first.diameter, second.diameter)})
+    at["A_s2"] = second.area
+    put(at, bars.DEPTH_SECOND, bars.TOTAL_AREA, bars.DEPTH_TWO_LAYERS)
+    return made | {bars.FITS_SECOND.key: utilisation(bars.FITS_SECOND, at)}
+
+
+def put_top(at: Numbers, shape: Shape, web: BarLayer, overhang: int, stirrup: str) -> Checks:
+    """Put top bars into the numbers: those within the web and ``overhang`` in each overhang."""
+    _put_layer(at, web, stirrup)
+    at["n_t"], at["n_o"] = float(web.number), float(overhang)
+    put(at, bars.LEAST_CLEAR, bars.CLEAR, SPREAD_AREAS[shape], bars.DEPTH_ONE_LAYER)
+    made = {bars.FITS.key: utilisation(bars.FITS, at)}
+    if shape != "rectangular":
+        put(at, minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
+        made[minimum.SPREAD.key] = utilisation(minimum.SPREAD, at)
+    return made
+
+
+def put_resistance(at: Numbers) -> float:
+    """Put block, axis and resistance into the numbers; return M_r. ``h_f`` absent: a rectangle."""
+    put(at, flexure.BLOCK_RECTANGULAR)
+    if "h_f" not in at or holds(flexure.IN_FLANGE, at):
+        put(at, flexure.NEUTRAL_AXIS)
+        return put(at, flexure.M_R_RECTANGULAR)
+    put(at, flexure.FLANGE_FORCE, flexure.BLOCK_IN_WEB, flexure.NEUTRAL_AXIS_IN_WEB)
+    return put(at, flexure.M_R_TEE)
+
+
+def _strength(at: Numbers) -> Checks:
+    put_resistance(at)
+    made = {
+        flexure.STRENGTH.key: utilisation(flexure.STRENGTH, at),
+        flexure.YIELDS.key: utilisation(flexure.YIELDS, at),
+    }
+    if "d_2" in at:
+        made[flexure.UPPER_LAYER_YIELDS.key] = utilisation(flexure.UPPER_LAYER_YIELDS, at)
+    return made
+
+
+def _minimum(at: Numbers, rules: Rules, width: Formula, *, top: bool) -> Checks:
+    if rules.minimum_rule == "10.5.1.1":
+        test = minimum.BY_CRACKING_TOP if top else minimum.BY_CRACKING
+    else:
+        put(at, width, minimum.A_S_MIN)
+        test = minimum.BY_AREA
+    used = utilisation(test, at)
+    if used > 1 and rules.waivable:
+        used = min(used, utilisation(minimum.WAIVER, at))
+    return {test.key: used}
+
+
+def _cracks(at: Numbers, area: Formula) -> Checks:
+    put(at, crack_control.STRESS_ALLOWANCE, crack_control.D_C, crack_control.D_S)
+    put(at, crack_control.BAR_COUNT, area, crack_control.Z)
+    return {crack_control.CRACKS.key: utilisation(crack_control.CRACKS, at)}
+
+
+def bottom_checks(at: Numbers, rules: Rules, layers: BarLayers, stirrup: str) -> Checks:
+    """Return every check of bottom bars at a section with the bottom in tension.
+
+    ``at`` holds materials, geometry (b, b_w, h, h_f where there is a slab), M_f and M_cr.
+    """
+    made = put_bottom(at, layers, stirrup)
+    made |= _strength(at)
+    made |= _minimum(at, rules, minimum.WIDTH_WEB, top=False)
+    largest = max(layers, key=lambda layer: layer.diameter)
+    at["A_b"] = BARS.number(largest.size, "A_b")
+    return made | _cracks(at, crack_control.TENSION_AREA)
+
+
+def top_checks(at: Numbers, rules: Rules, web: BarLayer, overhang: int, stirrup: str) -> Checks:
+    """Return every check of top bars at a section with the top in tension: the web compressed.
+
+    ``at`` holds materials, geometry (b_w, h, l, and b_f, b_o, h_f where there is a slab), M_f and
+    M_crn.
+    """
+    made = put_top(at, rules.shape, web, overhang, stirrup)
+    flange = at.pop("h_f", None)
+    at["b"] = at["b_w"]
+    made |= _strength(at)
+    if flange is not None:
+        at["h_f"] = flange
+    made |= _minimum(at, rules, TENSION_WIDTHS[rules.shape], top=True)
+    return made | _cracks(at, TENSION_AREAS[rules.shape])
+
+
+def fails(checks: Checks) -> bool:
+    """Tell whether a check does not hold."""
+    return any(used > 1 for used in checks.values())
