@@ -105,7 +105,9 @@ def faults(data: Mapping[str, Any]) -> Iterator[str]:
             elif entry["kind"] in ("check", "decision"):
                 yield from _comparison(entry["id"], entry, entry["system"])
             elif entry["kind"] == "found":
-                yield from _comparison(entry["id"], entry["closing"], entry["closing"].get("system", "N-mm"))
+                yield from _comparison(
+                    entry["id"], entry["closing"], entry["closing"].get("system", "N-mm")
+                )
 
 
 def _line(entry: Mapping[str, Any]) -> Iterator[str]:
