@@ -12,9 +12,9 @@ from lineproof.beams.validation.case_steps import AGREES, CaseSteps, agreement, 
 from lineproof.beams.validation.flexure_cases import FLEXURE_CASES
 from lineproof.beams.validation.frame_cases import FRAME_CASES
 from lineproof.beams.validation.notation import OWN, notation_for
-from lineproof.beams.validation.results import BENDING, WITH, WITHOUT
+from lineproof.beams.validation.results import BENDING
 from lineproof.beams.validation.section_cases import FORMULAS, SECTION_CASES
-from lineproof.beams.validation.strength_tests import BENDING_TESTS, SHEAR_TESTS
+from lineproof.beams.validation.strength_tests import BENDING_TESTS, SHEAR_TESTS, WITH, WITHOUT
 from lineproof.errors import UserError
 from lineproof.formula.proof import prove, prove_criterion
 from lineproof.record import Record

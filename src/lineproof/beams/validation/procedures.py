@@ -80,7 +80,7 @@ def _strained(values: Mapping[str, float], V_f: float) -> dict[str, float]:
 
 @procedure(
     "shear strength, general method, with stirrups", 1,
-    "bisection on V = V_c + V_s for the strain of V", (*_SHEAR, *_STIRRUPS),
+    "bisection on the shear that is its own resistance", (*_SHEAR, *_STIRRUPS),
 )  # fmt: skip
 def _strength_with_stirrups(*args: float) -> float:
     values = dict(zip((*_SHEAR, *_STIRRUPS), args, strict=True))
@@ -97,7 +97,7 @@ def _strength_with_stirrups(*args: float) -> float:
 
 @procedure(
     "shear strength, general method, without stirrups", 1,
-    "bisection on V = V_c for the strain of V", (*_SHEAR, "s_ze"),
+    "bisection on the shear that is its own resistance", (*_SHEAR, "s_ze"),
 )  # fmt: skip
 def _strength_without(*args: float) -> float:
     values = dict(zip((*_SHEAR, "s_ze"), args, strict=True))

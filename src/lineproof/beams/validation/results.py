@@ -13,6 +13,7 @@ from lineproof.beams.validation.flexure_cases import FLEXURE_CASES
 from lineproof.beams.validation.frame_cases import FRAME_CASES
 from lineproof.beams.validation.notation import PUBLISHED
 from lineproof.beams.validation.section_cases import SECTION_CASES
+from lineproof.beams.validation.strength_tests import WITH, WITHOUT
 from lineproof.drawing import to_json
 from lineproof.quantity.digits import digits_in
 from lineproof.record import Entry
@@ -20,8 +21,6 @@ from lineproof.record.printing import in_unit
 from lineproof.sheet import Sheet
 
 AGREEMENT, TESTS = "agreement", "tests"
-WITHOUT = ("OA1", "OA2", "OA3")
-WITH = ("A1", "A2", "A3", "B1", "B2", "B3", "C1", "C2", "C3")
 BENDING = ("T1", "T2", "T3")
 _COLUMNS = ["Case", "Quantity", "Published", "Predicted", "Ratio", "Source", "Basis"]
 _WIDTHS = (11.0, 40.0, 22.0, 24.0, 13.0, 21.0, 19.0)
