@@ -1,7 +1,7 @@
 """Strain compatibility: the second path that proves every closed-form resistance.
 
 Plane sections, eps_cu at the top, the concrete in thin strips, every layer of bars at its own
-strain; the neutral axis by bisection on equilibrium. Written apart from the closed forms on
+strain; the neutral axis as the root of equilibrium. Written apart from the closed forms on
 purpose: it shares no formula with them but the stress block itself.
 """
 
@@ -9,8 +9,10 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from functools import partial
-from itertools import pairwise
+from functools import lru_cache, partial
+
+import numpy as np
+from numpy.typing import NDArray
 
 from lineproof.errors import UserError
 from lineproof.formula import Criterion, criterion
@@ -28,7 +30,9 @@ PARABOLA = (
     "the factored strength at a strain of 0.002 and stays constant from there to the strain at "
     "crushing; the bars are elastic up to their factored yield strength, then constant."
 )
-_STEPS = 200
+_STEPS = 400
+_CLOSE = 1e-14
+"""Part of its own size within which the axis is found."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -47,10 +51,6 @@ class Section:
     b_w: float
     h_f: float
 
-    def width(self, depth: float) -> float:
-        """Return the width at a depth below the compression face [mm]."""
-        return self.b if depth < self.h_f else self.b_w
-
 
 @dataclass(frozen=True, slots=True)
 class Steel:
@@ -65,18 +65,20 @@ class Steel:
         return self.phi_s * max(-self.f_y, min(self.f_y, self.E_s * strain))
 
 
-Strips = Callable[[float], list[tuple[float, float]]]
-"""For a depth of the neutral axis: (compressive force [N], depth [mm]) of each strip."""
+Floats = NDArray[np.float64]
+Strips = Callable[[float], tuple[Floats, Floats]]
+"""For a depth of the neutral axis: compressive force [N] and depth [mm] of every strip."""
+
+_MIDDLES = (np.arange(STRIPS) + 0.5) / STRIPS
+"""Middles of the strips of a zone, as parts of its height."""
 
 
 def block_strips(section: Section, stress: float, beta_1: float) -> Strips:
     """Return the strips of a rectangular block of that stress [MPa] and depth beta_1 c."""
 
-    def strips(c: float) -> list[tuple[float, float]]:
-        return [
-            (stress * section.width(depth) * thickness, depth)
-            for depth, thickness in _cuts(section, beta_1 * c)
-        ]
+    def strips(c: float) -> tuple[Floats, Floats]:
+        depths, areas = _cuts(section, beta_1 * c)
+        return stress * areas, depths
 
     return strips
 
@@ -90,27 +92,23 @@ def parabola_stress(strain: float, peak: float, strain_at_peak: float) -> float:
 def parabola_strips(section: Section, peak: float, strain_at_peak: float, eps_cu: float) -> Strips:
     """Return the strips of a parabola up to ``peak`` [MPa]."""
 
-    def stress(depth: float, c: float) -> float:
-        return parabola_stress(eps_cu * (1 - depth / c), peak, strain_at_peak)
-
-    def strips(c: float) -> list[tuple[float, float]]:
-        return [
-            (stress(depth, c) * section.width(depth) * thickness, depth)
-            for depth, thickness in _cuts(section, c)
-        ]
+    def strips(c: float) -> tuple[Floats, Floats]:
+        depths, areas = _cuts(section, c)
+        share = np.minimum(eps_cu * (1 - depths / c) / strain_at_peak, 1.0)
+        return peak * (2 * share - share * share) * areas, depths
 
     return strips
 
 
-def _cuts(section: Section, bottom: float) -> list[tuple[float, float]]:
-    """Cut the depth into strips, none of them across the underside of the flange."""
-    edges = [0.0, min(section.h_f, bottom), bottom]
-    cuts = []
-    for top, end in pairwise(edges):
-        thickness = (end - top) / STRIPS
-        if thickness > 0:
-            cuts += [(top + (i + 0.5) * thickness, thickness) for i in range(STRIPS)]
-    return cuts
+def _cuts(section: Section, bottom: float) -> tuple[Floats, Floats]:
+    """Cut the depth into strips, none across the underside of the flange: depths and areas."""
+    flange = min(section.h_f, bottom)
+    below = bottom - flange
+    if below <= 0:
+        return flange * _MIDDLES, np.full(STRIPS, section.b * flange / STRIPS)
+    depths = np.concatenate([flange * _MIDDLES, flange + below * _MIDDLES])
+    areas = np.repeat([section.b * flange / STRIPS, section.b_w * below / STRIPS], STRIPS)
+    return depths, areas
 
 
 def neutral_axis(
@@ -121,16 +119,35 @@ def neutral_axis(
     ``displaced`` is the concrete stress taken off bars inside the compression zone [MPa].
     """
     low, high = 1e-3, 5 * max(layer.depth for layer in layers)
-    if _unbalanced(strips, layers, steel, eps_cu, displaced, high) < 0:
+
+    def unbalanced(c: float) -> float:
+        return _unbalanced(strips, layers, steel, eps_cu, displaced, c)
+
+    if unbalanced(high) < 0:
         raise UserError("strain compatibility: no neutral axis inside the section; check the bars")
-    for _ in range(_STEPS):
-        middle = (low + high) / 2
-        if middle in (low, high):
+    return _root(unbalanced, low, high)
+
+
+def _root(function: Callable[[float], float], low: float, high: float) -> float:
+    """Return where a function that rises from below zero at ``low`` is zero.
+
+    False position with the stale end's value halved; every third step halves the interval, so that
+    it closes whatever the shape.
+    """
+    f_low, f_high = function(low), function(high)
+    for step in range(_STEPS):
+        middle = (low * f_high - high * f_low) / (f_high - f_low) if f_high != f_low else low
+        if step % 3 == 2 or not low < middle < high:
+            middle = (low + high) / 2
+        if middle in (low, high) or high - low <= _CLOSE * high:
             break
-        if _unbalanced(strips, layers, steel, eps_cu, displaced, middle) > 0:
-            high = middle
+        found = function(middle)
+        if found == 0:
+            return middle
+        if found > 0:
+            high, f_high, f_low = middle, found, f_low / 2
         else:
-            low = middle
+            low, f_low, f_high = middle, found, f_high / 2
     return (low + high) / 2
 
 
@@ -145,14 +162,15 @@ def _unbalanced(
     strips: Strips, layers: list[Layer], steel: Steel, eps_cu: float, displaced: float, c: float
 ) -> float:
     tension = sum(_bar_force(layer, steel, eps_cu, displaced, c) for layer in layers)
-    return sum(force for force, _ in strips(c)) - tension
+    return float(strips(c)[0].sum()) - tension
 
 
 def moment(
     strips: Strips, layers: list[Layer], steel: Steel, eps_cu: float, c: float, displaced: float = 0
 ) -> float:
     """Return the moment of all forces about the compression face [N.mm]."""
-    concrete = sum(force * depth for force, depth in strips(c))
+    forces, depths = strips(c)
+    concrete = float(forces @ depths)
     bars = sum(_bar_force(x, steel, eps_cu, displaced, c) * x.depth for x in layers)
     return bars - concrete
 
@@ -190,6 +208,7 @@ def _case(args: tuple[float, ...]) -> tuple[Section, list[Layer], Steel]:
     return Section(b, b_w, h_f), layers, Steel(E_s, f_y, phi_s)
 
 
+@lru_cache(maxsize=256)
 def _axis_by_block(*args: float) -> float:
     alpha_1, beta_1, phi_c, f_c, eps_cu = args[:5]
     section, layers, steel = _case(args)
@@ -236,10 +255,10 @@ def _register(what: str, title: str, function: Callable[..., float]) -> dict[Key
     }
 
 
-AXIS = _register("neutral axis by layers", "bisection on equilibrium of layers", _axis_by_block)
+AXIS = _register("neutral axis by layers", "root of equilibrium of layers", _axis_by_block)
 MOMENT = _register("moment by layers", "moment of the layers about the top", _moment_by_block)
 AXIS_PARABOLA = _register(
-    "neutral axis by parabola", "bisection on equilibrium, parabolic curve", _axis_by_parabola
+    "neutral axis by parabola", "root of equilibrium, parabolic curve", _axis_by_parabola
 )
 MOMENT_PARABOLA = _register(
     "moment by parabola", "moment of the layers about the top, parabolic curve", _moment_by_parabola
