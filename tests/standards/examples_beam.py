@@ -38,6 +38,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
         {"b_w": 350, "s_z": 200, "A_ly": 200},
     ),
     "shear.STRAIN_IN_RANGE": ({"eps_x": 0.003}, {"eps_x": 0.0031}),
+    "shear.DEPTH_WITHOUT_STIRRUPS": ({"h": 750}, {"h": 751}),
     "shear.CLEAR_SPACE": ({"s": 100, "d_bs": 11.3}, {"s": 75, "d_bs": 11.3}),
     "shear_bars.HOOKS_SUFFICE": ({"d_bs": 16}, {"d_bs": 19.5}),
     # 0.85*1633*400 = 555.2 kN; 0.85*656*400 = 223.0 kN

@@ -220,6 +220,7 @@ TORSION = (
         "271100**2/2840*0.38*0.65*sqrt(35)/1e6 = 25.878595*0.247*5.91608 = 37.82",
     ),
     W("torsion.TORQUE", {"t_f": 8, "l_n": 7.15, "x_n": 481.5}, "8*(3.575 - 0.4815) = 24.748"),
+    W("torsion.FROM_FACE", {"x_f": 1.225, "b_sn": 450}, "1225 - 450/2 = 1000"),
     W("torsion.LEGS_LEFT", {"A_v": 200, "a_t": 0.258, "s": 150}, "200 - 2*0.258*150 = 122.6"),
     W("torsion.COMPATIBILITY", {"T_f": 28, "T_cr": 33.92}, "min(28, 0.67*33.92) = 22.73"),
     W("torsion.COMPATIBILITY", {"T_f": 20, "T_cr": 33.92}, "min(20, 22.73) = 20.00"),
@@ -277,6 +278,7 @@ TORSION = (
 # Interface of check no. 13: monolithic, 2-10M at 250 across a flange of 130.
 PLANE = {**C, "c_v": 1.0, "mu": 1.4}
 INTERFACE = (
+    W("interface.BARS_ACROSS", {"n_f": 2, "A_b": 100}, "2*100 = 200", CHECK_13),
     W("interface.RATIO", {"A_vf": 200, "A_cv": 32500}, "200/32500 = 0.00615", CHECK_13),
     W(
         "interface.RATIO_FLANGE",

@@ -36,6 +36,12 @@ ALTERNATIVE_FACTORS = LookupTable(
     basis=FROM_MEMORY,
 )
 
+BARS_ACROSS = _formula(
+    "A_vf = n_f*A_b",
+    clause="11.5",
+    title="Area of transverse bars across the plane, in one spacing",
+    basis=MECHANICS,
+)
 RATIO = _formula(
     "rho_v = A_vf/A_cv",
     clause="11.5",
@@ -113,6 +119,7 @@ STRENGTH = _criterion(
 )
 
 FORMULAS = (
+    BARS_ACROSS,
     RATIO,
     RATIO_FLANGE,
     COMPRESSION,

@@ -201,6 +201,7 @@ _ROWS = (
     ("k_i", "k", "i", "", "factor of the alternative interface shear resistance", ""),
     ("A_vf", "A", "vf", "", "area of bars across the shear plane", "mm2"),
     ("A_cv", "A", "cv", "", "area of the shear plane", "mm2"),
+    ("n_f", "n", "f", "", "number of layers of transverse bars of the flange", ""),
     ("s_f", "s", "f", "", "spacing of the transverse bars of the flange", "mm"),
     ("rho_v", "ρ", "v", "", "ratio of bars across the shear plane", ""),
     ("alpha_f", "α", "f", "", "angle between the bars and the shear plane", "deg"),

@@ -139,6 +139,16 @@ DEPTH_NEEDS_STIRRUPS = _criterion(
     no="Not deeper than 750 mm: the depth requires no stirrups.",
     key="depth-needs-stirrups",
 )
+DEPTH_WITHOUT_STIRRUPS = _criterion(
+    "h <= 750",
+    clause="11.2.8.1",
+    title="Depth of a beam without stirrups",
+    basis=FROM_MEMORY,
+    numbers={"750": "mm"},
+    yes="Not deeper than 750 mm: the depth requires no stirrups.",
+    no="Deeper than 750 mm: at least the minimum stirrups are REQUIRED.",
+    key="depth-without-stirrups",
+)
 A_V_MIN = _formula(
     "A_vmin = 0.06*sqrt(f_c)*b_w*s/f_y",
     clause="11.2.8.2",
@@ -356,6 +366,6 @@ FORMULAS = (
 CRITERIA = (
     NEAR_POINT_LOADS, STRENGTH, WEB_HOLDS, NEEDS_STIRRUPS, DEPTH_NEEDS_STIRRUPS, HAS_MINIMUM,
     CLOSER, SPACING, GRADE_FOR_SIMPLIFIED, CONCRETE_FOR_SIMPLIFIED, SHALLOW, SHALLOW_BELOW_SLAB,
-    LAYER_COUNTS, STRAIN_IN_RANGE, CLEAR_SPACE,
+    LAYER_COUNTS, STRAIN_IN_RANGE, CLEAR_SPACE, DEPTH_WITHOUT_STIRRUPS,
 )  # fmt: skip
 TABLES = (SIMPLIFIED, SPECIAL)

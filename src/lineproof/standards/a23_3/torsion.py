@@ -81,6 +81,12 @@ T_CR_FLANGE = _formula(
     basis=FROM_MEMORY,
     numbers={"0.38": "MPa^0.5"},
 )
+FROM_FACE = _formula(
+    "x_n = x_f - b_sn/2",
+    clause="geometry",
+    title="Distance of the section from the near face",
+    basis=MECHANICS,
+)
 TORQUE = _formula(
     "T_f = t_f*(l_n/2 - x_n)",
     clause="statics",
@@ -210,6 +216,6 @@ FORMULAS = (
     AREA_RECTANGLE, PERIMETER_RECTANGLE, AREA_OF_STIRRUP, PERIMETER_OF_STIRRUP, A_O, T_CR,
     COMPATIBILITY, T_R, LEG_FOR_TORSION, LEGS_FOR_SHEAR, LEGS, SHEAR_IN_STRAIN, EPS_X,
     SHEAR_IN_BARS, TENSION_SIDE, COMPRESSION_SIDE, END_SUPPORT, OVERHANG, AREA_L, PERIMETER_L,
-    AREA_T, PERIMETER_T, T_CR_FLANGE, TORQUE, LEGS_LEFT,
+    AREA_T, PERIMETER_T, T_CR_FLANGE, TORQUE, LEGS_LEFT, FROM_FACE,
 )  # fmt: skip
 CRITERIA = (COUNTS, STRENGTH, LEGS_PROVIDED, SECTION, CORNER_BARS)

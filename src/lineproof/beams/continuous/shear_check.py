@@ -1,0 +1,192 @@
+"""Demand over resistance of every case at every station, for stirrups as they stand.
+
+Utilisations are arrays (cases, columns): strength, spacing of the stirrups, bars along the beam.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any
+
+import numpy as np
+
+from lineproof.beams.analysis.curves import Floats
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.shear_arrays import Truths, value
+from lineproof.beams.continuous.shear_numbers import SpanEnd
+from lineproof.beams.continuous.shear_state import Critical, SpanState
+from lineproof.beams.continuous.stirrups import Band, Change, changes, effective
+from lineproof.standards.a23_3 import shear_bars, torsion
+
+Indices = np.ndarray[Any, np.dtype[np.intp]]
+SMALL = 1e-9
+_NEAR = 1e-6
+
+
+@dataclass(frozen=True, slots=True)
+class Spot:
+    """Which spacing counts at a station: that of its band, or less beside a change."""
+
+    spacing: float
+    change: Change | None
+    aside: float
+
+    @property
+    def counted(self) -> float:
+        """The 1/s that counts [1/mm]; zero where no stirrups count."""
+        return 1 / self.spacing
+
+
+@dataclass(frozen=True, eq=False)
+class SpanCheck:
+    """A span with its stirrups: ``bands`` from the face of the left support."""
+
+    state: SpanState
+    bands: tuple[Band, ...]
+
+    @cached_property
+    def counted(self) -> tuple[Band, ...]:
+        """The bands as they count: infinite spacing where stirrups are below the minimum."""
+        most = self.state.minimum_spacing * (1 + 1e-12)
+        return tuple(b if b.spacing <= most else Band(b.start, b.end, math.inf) for b in self.bands)
+
+    @cached_property
+    def u(self) -> Floats:
+        """Stations of the columns from the left face."""
+        made: Floats = self.state.columns - self.state.faces[0]
+        return made
+
+    @cached_property
+    def owners(self) -> Indices:
+        """The band that counts at each column: where two meet, the one of the wider spacing."""
+        return np.array([self._owner(u) for u in self.u.tolist()])
+
+    def _owner(self, u: float) -> int:
+        inside = [n for n, b in enumerate(self.bands) if b.start - _NEAR <= u <= b.end + _NEAR]
+        return max(inside, key=lambda n: self.bands[n].spacing)
+
+    def owner(self, row: int, column: int) -> int:
+        """Return the band in which a case is checked at a column."""
+        return self._owner(float(self.state.v["x"][row, column]) - self.state.faces[0])
+
+    @cached_property
+    def effective(self) -> Floats:
+        """The 1/s that counts (cases, columns); at a critical section the least up to the face."""
+        state = self.state
+        along = effective(self.counted, state.h, self.u)
+        made = np.broadcast_to(along, state.v["M"].shape).copy()
+        for column, critical in ((0, state.left), (-1, state.right)):
+            for x in np.unique(critical.x):
+                made[critical.x == x, column] = self.spot_counted(column, float(x))
+        return made
+
+    def spot_counted(self, column: int, x: float) -> float:
+        """Return the least 1/s between a face and the critical section x from the left axis."""
+        return float(effective(self.counted, self.state.h, self._to_face(column, x)).min())
+
+    def _to_face(self, column: int, x: float) -> Floats:
+        at = x - self.state.faces[0]
+        inside = self.u <= at if column == 0 else self.u >= at
+        return np.concatenate([[at], self.u[inside]])
+
+    @cached_property
+    def plain(self) -> Truths:
+        """Where no stirrups count (cases, columns)."""
+        made: Truths = self.effective == 0
+        return made
+
+    @cached_property
+    def strength(self) -> Floats:
+        """Shear, with torsion where it counts, over what resists it."""
+        return self.state.utilisation(self.effective, self.plain)
+
+    @cached_property
+    def spacing(self) -> Floats:
+        """Spacing over the largest allowed; zero where no stirrups count or are needed."""
+        widths = np.array([b.spacing for b in self.counted])[self.owners]
+        made: Floats = np.where(np.isinf(widths), 0.0, widths / self.state.v["s_max"])
+        return made
+
+    def at(self, row: int, column: int) -> Spot:
+        """Return which spacing counts for a case at a column."""
+        state, u = self.state, float(self.u[column])
+        if column in (0, len(self.u) - 1):
+            critical = state.left if column == 0 else state.right
+            places = self._to_face(0 if column == 0 else -1, float(critical.x[row]))
+            u = float(places[effective(self.counted, state.h, places).argmin()])
+        inside = [b for b in self.counted if b.start - _NEAR <= u <= b.end + _NEAR]
+        widest = max(inside, key=lambda band: band.spacing)
+        best = Spot(widest.spacing, None, 0.0)
+        least = best.counted
+        for change in changes(self.counted, state.h):
+            if change.start - _NEAR <= u <= change.end + _NEAR:
+                here = float(change.counted(np.array(u), state.h))
+                if here < least * (1 - 1e-12):
+                    least, best = here, Spot(change.closer, change, abs(u - change.at))
+        return best
+
+    @cached_property
+    def bars(self) -> Mapping[str, Any]:
+        """Forces in the bars along the beam with their utilisations (cases, columns)."""
+        state, v = self.state, self.state.v
+        basis, acting = state.basis, state.numbers.torsion
+        most = v["cot"] * self.effective
+        w = dict(v) | {"V_s": most - v["cot"] * 2 * v["a_t"] / basis.A_v}
+        made: dict[str, Any] = {
+            "F_lt": value(shear_bars.TENSION_SIDE, w),
+            "F_lc": value(shear_bars.COMPRESSION_SIDE, w),
+            "F_le": value(shear_bars.END_SUPPORT, w),
+            "V_s": w["V_s"],
+        }
+        made["F_lc"] = np.maximum(made["F_lc"], 0.0)
+        if acting is not None:
+            w["V_le"] = value(torsion.SHEAR_IN_BARS, w)
+            for name, formula in (
+                ("F_lt", torsion.TENSION_SIDE),
+                ("F_lc", torsion.COMPRESSION_SIDE),
+                ("F_le", torsion.END_SUPPORT),
+            ):
+                made[name] = np.where(v["counts"], value(formula, w), made[name])
+        strength = basis.phi_s * basis.f_y
+        force = self._capped(made["F_lt"])
+        made["tension"] = force / (strength * np.maximum(v["A_s"], SMALL))
+        made["compression"] = made["F_lc"] / (strength * np.maximum(v["A_sp"], SMALL))
+        made["bearing"] = np.zeros_like(made["F_le"])
+        for column, end in ((0, state.numbers.left), (-1, state.numbers.right)):
+            if at_bearing(end):
+                force = np.where(v["bottom"][:, column], made["F_le"][:, column], 0.0)
+                made["bearing"][:, column] = force / (strength * max(end.A_bearing, SMALL))
+        return made
+
+    def _capped(self, F_lt: Floats) -> Floats:
+        """Return the force on the tension side at the ends, capped where 11.3.9.4 lets it."""
+        made = F_lt.copy()
+        basis, v = self.state.basis, self.state.v
+        ends: tuple[tuple[int, End], ...] = ((0, "left"), (-1, "right"))
+        for column, end in ends:
+            for row in range(len(made)):
+                cap = self.cap(end, row)
+                if cap is not None and not v["counts"][row, column]:
+                    made[row, column] = min(made[row, column], basis.phi_s * basis.f_y * cap)
+        return made
+
+    def cap(self, end: End, row: int) -> float | None:
+        """Return the area of bars that the largest moment alone requires, if it is a cap here."""
+        numbers = self.state.numbers
+        column = 0 if end == "left" else -1
+        near = numbers.left if end == "left" else numbers.right
+        if near.held != "direct" or self.critical(end).reason[row]:
+            return None
+        return numbers.A_sr if self.state.v["bottom"][row, column] else near.A_sr
+
+    def critical(self, end: End) -> Critical:
+        """Return the critical sections of an end."""
+        return self.state.left if end == "left" else self.state.right
+
+
+def at_bearing(end: SpanEnd) -> bool:
+    """Tell whether 11.3.9.5 asks for bottom bars at the bearing: exterior and held from below."""
+    return end.exterior and end.held == "direct"

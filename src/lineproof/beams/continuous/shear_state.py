@@ -1,0 +1,336 @@
+"""Shear of one span, every load case at every station with its own pair of moment and shear.
+
+Columns: the section at the left support that 11.3.2 lets a case use, the stations from face to
+face, the section at the right support. Nearer to a support than that section, its values hold.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any
+
+import numpy as np
+
+from lineproof.beams.analysis.arrangements import LoadCase
+from lineproof.beams.analysis.curves import Floats, Side
+from lineproof.beams.analysis.model import PartialLoad, PointLoad
+from lineproof.beams.continuous.forces import End, Forces
+from lineproof.beams.continuous.shear_arrays import Truths, holds, sides, value
+from lineproof.beams.continuous.shear_numbers import (
+    ShearBasis,
+    SpanNumbers,
+    area_at,
+    check_span,
+    depth_at,
+)
+from lineproof.beams.continuous.torsion import designed_for, torque_per_length
+from lineproof.standards.a23_3 import shear, torsion
+
+STEP = 50.0
+"""Distance of the stations at which a span is checked [mm], besides loads and ends."""
+MOST_STRAIN = 0.003
+"""Range of the longitudinal strain of the general method."""
+COARSE = 20.0
+"""Size of aggregate from which the simplified method needs no s_ze [mm] (11.3.6.3)."""
+_LEAST_AREA = 1e-3
+"""Area that stands for none, so that the strain is large instead of undefined [mm2]."""
+_DEEP_FOR_PLAIN = 750.0
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Critical:
+    """The section at one end at which each case is designed (cases,): 11.3.2.
+
+    ``x`` is measured from the left axis; ``reason`` is why a case is taken at the face ("" at
+    d_v); ``V_pl`` the shear by point loads between the face and d_v; ``mixed`` where the moment
+    changes its sign between the face and the section, so that the smaller depth is used.
+    """
+
+    x: Floats
+    M: Floats
+    V: Floats
+    d: Floats
+    V_pl: Floats
+    reason: tuple[str, ...]
+    mixed: Truths
+
+
+@dataclass(frozen=True, eq=False)
+class SpanState:
+    """Pairs and resistances of a span, arrays (cases, columns).
+
+    ``needed`` is what strength asks of the stirrups, 1/s [1/mm]; ``V_plain`` the resistance of the
+    concrete without stirrups or below the minimum; ``counts`` where torsion counts. ``sides``
+    tells on which side of a load a column stands; ``nearer`` the columns nearer to a support than
+    its critical section.
+    """
+
+    basis: ShearBasis
+    numbers: SpanNumbers
+    cases: tuple[LoadCase, ...]
+    faces: tuple[float, float]
+    stations: Floats
+    sides: tuple[Side, ...]
+    left: Critical
+    right: Critical
+    v: dict[str, Any]
+    nearer: Truths
+
+    @property
+    def h(self) -> float:
+        """Depth of the span."""
+        return self.numbers.h
+
+    @cached_property
+    def columns(self) -> Floats:
+        """Stations of the columns; the critical sections stand at the faces."""
+        return np.concatenate([[self.faces[0]], self.stations, [self.faces[1]]])
+
+    @cached_property
+    def required(self) -> Floats:
+        """The 1/s that strength asks for at each column, the largest of all cases."""
+        made: Floats = self.v["needed"].max(axis=0)
+        return made
+
+    @cached_property
+    def largest_spacing(self) -> Floats:
+        """The largest spacing allowed at each column by 11.3.8 and by the minimum of 11.2.8.2."""
+        made: Floats = np.minimum(self.v["s_max"].min(axis=0), self.minimum_spacing)
+        return made
+
+    @cached_property
+    def minimum_spacing(self) -> float:
+        """Spacing at which the stirrups are just the minimum."""
+        return float(value(shear.SPACING_MINIMUM, _materials(self.basis)))
+
+    @cached_property
+    def hopeless(self) -> Floats:
+        """Utilisation of what no stirrups cure: web, section with torsion, strain; by case."""
+        v = self.v
+        made: Floats = np.maximum.reduce(
+            [v["V_f"] / v["V_rmax"], v["section"], v["eps_asked"] / MOST_STRAIN]
+        )
+        return made
+
+    def utilisation(self, effective: Floats, plain: Truths) -> Floats:
+        """Return demand over resistance of every case and column for 1/s at the columns [1/mm].
+
+        Columns that are ``plain`` have no stirrups that count.
+        """
+        v = self.v
+        V_s = v["cot"] * effective
+        with np.errstate(divide="ignore", invalid="ignore"):
+            by_shear = v["V_f"] / np.minimum(v["V_c"] + V_s, v["V_rmax"])
+            by_both = np.where(v["counts"], v["needed"] / effective, by_shear)
+            alone = v["V_f"] / v["V_plain"]
+        alone = np.where(v["counts"] | (self.h > _DEEP_FOR_PLAIN), np.inf, alone)
+        made: Floats = np.maximum(np.where(plain, alone, by_both), self.hopeless)
+        return made
+
+
+def _materials(basis: ShearBasis) -> dict[str, Any]:
+    names = ("b_w", "f_c", "f_y", "phi_c", "phi_s", "lambda_", "a_max", "E_s", "A_v", "d_bs")
+    return {name: getattr(basis, name) for name in names}
+
+
+def span_state(
+    basis: ShearBasis, numbers: SpanNumbers, forces: Forces, extra: tuple[float, ...] = ()
+) -> SpanState:
+    """Work out a span; ``extra`` are further stations from its left axis."""
+    span = numbers.span
+    faces = forces.beam.faces(span)
+    check_span(numbers, faces[1] - faces[0])
+    left = _critical(basis, numbers, forces, "left", faces[0])
+    right = _critical(basis, numbers, forces, "right", faces[1])
+    x, sides, M, V = _along(forces, span, faces, extra)
+    shape = (len(forces.cases), len(x) + 2)
+    at = np.empty(shape)
+    at[:, 0], at[:, 1:-1], at[:, -1] = left.x, x, right.x
+    M = np.hstack([left.M[:, None], M, right.M[:, None]])
+    V = np.hstack([left.V[:, None], V, right.V[:, None]])
+    bottom = M >= 0
+    d = np.where(bottom, depth_at(numbers.bottom, at), depth_at(numbers.top, at))
+    d[:, 0], d[:, -1] = left.d, right.d
+    areas = area_at(numbers.bottom, at), area_at(numbers.top, at)
+    v = _materials(basis) | {
+        "h": numbers.h, "x": at, "M": M, "V": V, "M_f": np.abs(M), "V_f": np.abs(V),
+        "bottom": bottom, "d": d, "A_s": np.where(bottom, *areas),
+        "A_sp": np.where(bottom, *areas[::-1]),
+    }  # fmt: skip
+    v["T_all"] = _torsion_along(numbers, forces, faces, at)
+    v |= resistances(basis, numbers, v)
+    room = 1e-6
+    before, after = at < left.x[:, None] - room, at > right.x[:, None] + room
+    before[:, 0] = after[:, 0] = before[:, -1] = after[:, -1] = False
+    for name in (
+        "needed",
+        "s_max",
+        "section",
+        "eps_asked",
+        "V_rmax",
+        "V_c",
+        "V_plain",
+        "V_f",
+        "cot",
+        "counts",
+    ):
+        v[name] = np.where(before, v[name][:, :1], np.where(after, v[name][:, -1:], v[name]))
+    sides = ("left", *sides, "right")
+    return SpanState(basis, numbers, forces.cases, faces, x, sides, left, right, v, before | after)
+
+
+def _along(
+    forces: Forces, span: int, faces: tuple[float, float], extra: tuple[float, ...]
+) -> tuple[Floats, tuple[Side, ...], Floats, Floats]:
+    """Return stations from face to face with M and V; beside a load on both sides of it."""
+    curves = forces.solved.solution.span(span)
+    steps = np.arange(faces[0], faces[1], STEP)
+    inner = [b for b in curves.breaks.tolist() if faces[0] < b < faces[1]]
+    right = np.array(sorted({*steps.tolist(), faces[1], *inner, *extra}))
+    left = np.array([*inner, faces[1]])
+    pairs = [forces.along(span, left, "left"), forces.along(span, right, "right")]
+    x = np.concatenate([left, right])
+    order = np.argsort(x, kind="stable")
+    M, V = (np.hstack([pair[k] for pair in pairs])[:, order] for k in (0, 1))
+    sides: tuple[Side, ...] = tuple("left" if n < len(left) else "right" for n in order)
+    return x[order], sides, M, V
+
+
+def _torsion_along(
+    numbers: SpanNumbers, forces: Forces, faces: tuple[float, float], at: Floats
+) -> Floats:
+    """Return the size of the torsion of every case and column, before redistribution."""
+    if numbers.torsion is None:
+        return np.zeros_like(at)
+    torque = torque_per_length(numbers.torsion, forces, numbers.span)
+    made: Floats = np.abs(torque[:, None] * ((faces[0] + faces[1]) / 2 - at))
+    return made
+
+
+def _critical(
+    basis: ShearBasis, numbers: SpanNumbers, forces: Forces, end: End, face: float
+) -> Critical:
+    """Return the section at an end for every case: at d_v where 11.3.2 lets it, else at the face.
+
+    A case uses the depth of the face in tension. Where its moment changes sign between the face
+    and the section, it uses the smaller depth of the two.
+    """
+    inward = 1.0 if end == "left" else -1.0
+    support: Any = numbers.left if end == "left" else numbers.right
+    depths = [float(depth_at(bars, np.array(face))) for bars in (numbers.bottom, numbers.top)]
+    d_v = [float(value(shear.D_V, {"d": d, "h": numbers.h})) for d in depths]
+    xs = np.array([face, *(face + inward * each for each in d_v)])
+    M, V = forces.along(numbers.span, xs, end)
+    sagging = M >= 0
+    bottom: Truths = np.all(sagging, axis=1)
+    top: Truths = ~np.any(sagging, axis=1)
+    smaller = int(d_v[1] < d_v[0])
+    which = np.where(bottom, 0, np.where(top, 1, smaller))
+    d = np.where(bottom, depths[0], np.where(top, depths[1], min(depths)))
+    V_pl = np.array([near_point_loads(forces, numbers.span, end, face, each) for each in d_v])
+    V_pl = np.take_along_axis(V_pl, which[None, :], axis=0)[0]
+    small = holds(
+        shear.NEAR_POINT_LOADS,
+        _materials(basis) | {"V_pl": V_pl, "d_v": np.array(d_v)[which]},
+    )
+    pushed = inward * V[:, 0] > 0
+    reason = tuple(_reason(support.held, *each) for each in zip(pushed, small, strict=True))
+    at_d_v = np.array([not each for each in reason])
+    column = np.where(at_d_v, which + 1, 0)
+    rows = np.arange(len(M))
+    return Critical(xs[column], M[rows, column], V[rows, column], d, V_pl, reason, ~(bottom | top))
+
+
+def _reason(held: str, pushed: bool, small: bool) -> str:  # noqa: FBT001 - two truths of one case
+    if held != "direct":
+        return held
+    if not pushed:
+        return "uplift"
+    return "" if small else "point load"
+
+
+def near_point_loads(forces: Forces, span: int, end: End, face: float, d_v: float) -> Floats:
+    """Return the point loads between the face and d_v of every case [N], each counted whole.
+
+    A load on part of the span that is not longer than d_v counts as a point load.
+    """
+    rows = forces.solution.rows
+    sums = np.zeros(len(rows))
+    for load, size in loads_near(forces, span, end, face, d_v):
+        sums[rows.index((load.kind, span))] += size
+    made: Floats = forces.factors @ sums
+    return np.abs(made)
+
+
+def loads_near(
+    forces: Forces, span: int, end: End, face: float, d_v: float
+) -> list[tuple[PointLoad | PartialLoad, float]]:
+    """Return the loads on a span that count as point loads within d_v of a face, with sizes."""
+    low, high = (face, face + d_v) if end == "left" else (face - d_v, face)
+    found: list[tuple[PointLoad | PartialLoad, float]] = []
+    for load in forces.loads:
+        if load.span != span:
+            continue
+        if isinstance(load, PointLoad) and low <= load.at <= high:
+            found.append((load, load.P))
+        elif isinstance(load, PartialLoad) and load.end - load.start <= d_v:
+            part = min(load.end, high) - max(load.start, low)
+            if part > 0:
+                found.append((load, load.w * part))
+    return found
+
+
+def resistances(basis: ShearBasis, numbers: SpanNumbers, v: dict[str, Any]) -> dict[str, Any]:
+    """Return what the catalogue gives for pairs: strain, V_c, what is asked of the stirrups."""
+    v = dict(v)
+    v["d_v"] = value(shear.D_V, v)
+    _torsion(numbers, v)
+    _strain(basis, v)
+    v["a_t"] = np.zeros_like(v["M"])
+    if numbers.torsion is not None:
+        v["a_t"] = np.where(v["counts"], value(torsion.LEG_FOR_TORSION, v), 0.0)
+    v["V_c"] = value(shear.V_C, v)
+    v["V_plain"] = value(shear.V_C, v | {"beta": v["beta_plain"]})
+    v["V_rmax"] = value(shear.V_R_MAX, v)
+    v["cot"] = value(shear.V_S, v | {"s": 1.0})
+    v["needed"] = (value(torsion.LEGS_FOR_SHEAR, v) + 2 * v["a_t"]) / basis.A_v
+    v["closer"] = holds(shear.CLOSER, v) | v["counts"]
+    v["s_max"] = np.where(v["closer"], value(shear.S_MAX_HALVED, v), value(shear.S_MAX, v))
+    return v
+
+
+def _torsion(numbers: SpanNumbers, v: dict[str, Any]) -> None:
+    """Find where torsion counts, the torsion designed for and how it uses the section."""
+    nothing = np.zeros_like(v["M"])
+    v["counts"], v["section"], v["T_f"] = nothing.astype(bool), nothing, nothing
+    if numbers.torsion is None:
+        return
+    v |= numbers.torsion.values
+    v["counts"] = holds(torsion.COUNTS, v | {"T_f": v["T_all"]})
+    v["T_f"] = np.where(v["counts"], designed_for(numbers.torsion, v["T_all"]), 0.0)
+    stress, limit = sides(torsion.SECTION, v)
+    v["section"] = np.where(v["counts"], stress / limit, 0.0)
+
+
+def _strain(basis: ShearBasis, v: dict[str, Any]) -> None:
+    """Find strain, factor and angle by the chosen method, with minimum stirrups and without."""
+    v["a_g"] = value(shear.A_G, v)
+    v["s_ze"] = value(shear.S_ZE, v | {"s_z": v["d_v"]})
+    v["eps_asked"] = np.zeros_like(v["M"])
+    if basis.method == "simplified":
+        row = shear.SIMPLIFIED.rows["minimum stirrups or more"]
+        v["beta"] = np.full_like(v["M"], float(row["beta"]))
+        v["theta"] = np.full_like(v["M"], float(row["theta"]))
+        coarse = v["a_g"] >= COARSE
+        v["beta_plain"] = value(shear.BETA_D_V if coarse else shear.BETA_S_ZE, v)
+        return
+    v["A_s"] = np.maximum(v["A_s"], _LEAST_AREA)
+    asked = value(shear.EPS_X, v)
+    if v["counts"].any():
+        v["V_fe"] = value(torsion.SHEAR_IN_STRAIN, v)
+        asked = np.where(v["counts"], value(torsion.EPS_X, v), asked)
+    v["eps_asked"] = asked
+    v["eps_x"] = np.minimum(asked, MOST_STRAIN)
+    v["beta"], v["theta"] = value(shear.BETA_STIRRUPS, v), value(shear.THETA, v)
+    v["beta_plain"] = value(shear.BETA_GENERAL, v)

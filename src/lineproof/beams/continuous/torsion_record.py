@@ -1,0 +1,104 @@
+"""Torsion as recorded lines: section and threshold of a span, torsion and legs at a section."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from lineproof.beams.continuous.shear_numbers import ShearBasis
+from lineproof.beams.continuous.shear_sections import ShearSection
+from lineproof.beams.continuous.torsion import AREAS, SpanTorsion
+from lineproof.beams.inputs import Shape
+from lineproof.beams.steps import Steps
+from lineproof.errors import UserError
+from lineproof.formula import FROM_MEMORY
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import bars
+from lineproof.standards.a23_3 import torsion as clause
+
+_HELD = (
+    "The ends of the span are held against turning at the faces of the supports: the torque of "
+    "each half goes to the nearer support, and T = t (l_n/2 - x)."
+)
+_EQUILIBRIUM = "The torsion is needed for equilibrium: all of it is designed for."
+_COMPATIBILITY = (
+    "The torsion arises from compatibility: the frame can redistribute what exceeds 0.67 times the "
+    "torsion that cracks the section. Members that take up the rest must be designed for it."
+)
+_KINDS = {"D": "dead load", "L": "live load", "L_st": "live load of storage", "S": "snow"}
+
+
+def record_span_torsion(
+    steps: Steps, torsion: SpanTorsion, shape: Shape, corner: str
+) -> dict[str, Entry]:
+    """Record inside the open part torques and section of a span; return what sections need.
+
+    Needs b_w, ``h``, c_c, d_bs, and with a flange h_f and b_o in place. ``corner`` is the size of
+    the thinnest bar in a corner of the stirrups.
+    """
+    sheet = steps.sheet
+    made = {}
+    for kind, torque in torsion.torques.items():
+        name = _symbol(kind)
+        made[name] = sheet.given(
+            name, f"{torque / 1000:.12g} kN", f"torque per length by {_KINDS.get(kind, kind)}",
+            source="kN.m per metre of beam",
+        )  # fmt: skip
+    sheet.note("held", _HELD, title="Torsion along the span", clause="statics")
+    text = _COMPATIBILITY if torsion.compatibility else _EQUILIBRIUM
+    sheet.note("kind-of-torsion", text, title="Torsion", clause="11.2.9.2", basis=FROM_MEMORY)
+    steps.lines(clause.AREA_RECTANGLE, clause.PERIMETER_RECTANGLE, clause.T_CR)
+    made["T_cr"] = made["T_crd"] = steps.entry("T_cr")
+    if torsion.compatibility and shape in AREAS:
+        steps.lines(clause.OVERHANG, *AREAS[shape])
+        made["T_crd"] = steps.line(clause.T_CR_FLANGE)
+    steps.lines(clause.AREA_OF_STIRRUP, clause.PERIMETER_OF_STIRRUP, clause.A_O)
+    made["d_bc"] = sheet.lookup("d_bc", bars.BARS, corner, "d_b", title="diameter, corner bar")
+    return made | {name: steps.entry(name) for name in ("A_oh", "p_h", "A_o")}
+
+
+def _symbol(kind: str) -> str:
+    """Return the symbol of the torque per length by a load type."""
+    return f"t_{kind.replace('_', '')}"
+
+
+def record_torsion(steps: Steps, basis: ShearBasis, section: ShearSection) -> None:
+    """Record inside the open part the torsion at a section and whether it counts.
+
+    Needs what :func:`record_span_torsion` returns in place, and l_n, x_f, d_v, b_sn.
+    """
+    if not section.torques:
+        return
+    terms = " + ".join(f"{factor:.12g}*{_symbol(kind)}" for kind, _, factor in section.torques)
+    if any(torque * factor < 0 for _, torque, factor in section.torques):
+        terms = f"abs({terms})"
+    bound: dict[str, Any] = {_symbol(k): steps.entry(_symbol(k)) for k, _, _ in section.torques}
+    t_f = steps.sheet.line(f"t_f = {terms}", title="Torque per length of this load case", **bound)
+    steps.bind(t_f=t_f)
+    if section.place == "station":
+        steps.line(clause.FROM_FACE)
+    elif section.place == "d_v":
+        steps.bind(x_n=steps.entry("d_v"))
+    else:
+        steps.bind(x_n=steps.sheet.given("x_n", "0 mm", source="at the face"))
+    T_f = steps.line(clause.TORQUE)
+    if not steps.decide(clause.COUNTS):
+        return
+    if not basis.closed:
+        raise UserError(
+            "stirrups: torsion counts here, but the stirrups are open; write closed stirrups"
+        )
+    if section.compatibility:
+        T_f = steps.line(clause.COMPATIBILITY, T_cr=steps.entry("T_crd"))
+    steps.bind(T_f=T_f)
+
+
+def record_torsion_legs(steps: Steps) -> None:
+    """Record inside the open part the closed stirrups for shear and torsion together.
+
+    What torsion leaves of the legs stands for A_v from here on.
+    """
+    steps.check(clause.CORNER_BARS, d_b=steps.entry("d_bc"))
+    steps.lines(clause.LEG_FOR_TORSION, clause.LEGS_FOR_SHEAR, clause.LEGS)
+    steps.check(clause.LEGS_PROVIDED)
+    steps.check(clause.SECTION)
+    steps.bind(A_v=steps.line(clause.LEGS_LEFT))
