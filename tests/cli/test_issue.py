@@ -7,6 +7,7 @@ from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
+import ezdxf.filemanagement as ezdxf
 import pytest
 
 from lineproof.cli import main
@@ -116,6 +117,76 @@ def test_two_calcs_make_one_package(
     data = json.loads(capsys.readouterr().out)
     assert data["calc"] == "B1, B2"
     assert [line["calc"] for line in data["lines"]] == ["B1"] * 12 + ["B2"] * 12
+
+
+DRAWN = """\
+from lineproof.drawing import Dimension, Figure, Line, to_json
+figure = Figure(50, 20, 0.01, (5, 5), (
+    Line((0, 0), (4000, 0)), Dimension((0, 0), (4000, 0), "horizontal", 5)), "A line")
+with sheet.part("shown", "Drawing and schedule"):
+    sheet.figure("line", to_json(figure), title="A line", alt="A line", front=1, dxf="elevation")
+    sheet.table("bars", ["Mark", "Length, mm"], [["B1", "4000"], ["=x", "-1"]],
+                title="Bars", front=2, csv="bar-schedule")
+"""
+"""A cell that draws a line of 4 m and lists bars."""
+
+
+def drawn(notebook: Notebook, calc_id: str = "B1") -> Notebook:
+    made: Notebook = json.loads(json.dumps(notebook))
+    made["cells"][3]["source"] = made["cells"][3]["source"].replace('"B1"', f'"{calc_id}"')
+    made["cells"][5]["source"] += DRAWN
+    return made
+
+
+def test_drawings_and_tables_are_issued_beside_the_package(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    path = save(drawn(unrun, "B 1"), tmp_path / "beam.ipynb")
+    for name in ("first", "second"):
+        assert main(["issue", str(path), "--into", str(tmp_path / name)]) == 0
+    first = tmp_path / "first"
+    assert files_in(first) == ["B-1-bar-schedule.csv", "B-1-elevation.dxf", *NAMES]
+    assert (first / "B-1-bar-schedule.csv").read_bytes() == (
+        b'\xef\xbb\xbfMark,"Length, mm"\r\nB1,4000\r\n\'=x,-1\r\n'
+    )
+    (line,) = ezdxf.readfile(first / "B-1-elevation.dxf").modelspace().query("LINE")
+    assert (line.dxf.end.x, line.dxf.layer) == (4000.0, "S-CONCRETE")
+    for file in first.iterdir():
+        assert file.read_bytes() == (tmp_path / "second" / file.name).read_bytes()
+    assert str(first / "B-1-elevation.dxf") in capsys.readouterr().out.splitlines()
+
+
+def test_drawings_of_two_calcs_do_not_overwrite_each_other(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    paths = [save(drawn(unrun, name), tmp_path / f"{n}.ipynb")
+             for n, name in enumerate(("B 1", "b-1"))]  # fmt: skip
+    said = refused(["issue", *map(str, paths), "--into", str(tmp_path / "out")], capsys)
+    assert "b-1: b-1-elevation.dxf is already a file of another calc of the package" in said
+    assert "b-1: b-1-bar-schedule.csv is already a file" in said
+    assert not (tmp_path / "out").exists()
+
+
+def test_a_drawing_that_cannot_be_written_leaves_nothing(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    path = save(drawn(unrun), tmp_path / "beam.ipynb")
+    folder = tmp_path / "issued"
+    (folder / "B1-elevation.dxf").mkdir(parents=True)
+    assert "B1-elevation.dxf: cannot be written" in refused(["issue", str(path)], capsys)
+    assert files_in(folder) == []
+
+
+def test_a_figure_that_cannot_be_drawn_is_refused(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    unrun["cells"][5]["source"] += (
+        'with sheet.part("shown", "Shown"):\n'
+        '    sheet.figure("f", {"shapes": []}, title="F", alt="F", dxf="f")\n'
+    )
+    path = save(unrun, tmp_path / "beam.ipynb")
+    assert "figure" in refused(["issue", str(path)], capsys)
+    assert files_in(tmp_path) == ["beam.ipynb"]
 
 
 def refused(arguments: list[str], capsys: pytest.CaptureFixture[str]) -> str:

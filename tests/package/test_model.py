@@ -11,9 +11,9 @@ from lineproof.errors import UserError
 from lineproof.formula import Notation
 from lineproof.formula.grammar import parse_expression
 from lineproof.package import build_package
+from lineproof.package.calc import PartBlock
 from lineproof.package.facts import project_facts
 from lineproof.package.layout import WORKING_WIDTH, cut, fitted
-from lineproof.package.model import PartBlock
 from lineproof.typeset import formula_math, plain
 from lineproof.typeset.chains import Chain
 from lineproof.typeset.measure import width

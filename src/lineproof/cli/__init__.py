@@ -50,8 +50,8 @@ def _add_issue(commands: _Commands[argparse.ArgumentParser]) -> None:
         "issue",
         help="re-execute calcs, compare them with what is stored, print the package",
         description="Re-execute calc notebooks, compare every line with what is stored, and print "
-        "the package: PDF, HTML and record, all of them or none. Several notebooks of one "
-        "project make one package.",
+        "the package: PDF, HTML, record, and the drawings (DXF) and tables (CSV) of the calcs, all "
+        "of them or none. Several notebooks of one project make one package.",
     )
     issue.add_argument("notebooks", nargs="+", type=Path, metavar="CALC.ipynb")
     issue.add_argument(

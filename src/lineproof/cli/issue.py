@@ -5,7 +5,7 @@ from __future__ import annotations
 import argparse
 import os
 import sys
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import replace
 from pathlib import Path
 
@@ -85,7 +85,12 @@ def _check_project(reruns: Sequence[Rerun]) -> None:
 
 
 def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Path, bytes]:
-    from lineproof.package import build_package, to_html, to_pdf  # noqa: PLC0415 - 0.1 s
+    from lineproof.package import (  # noqa: PLC0415 - 0.1 s
+        build_package,
+        calc_files,
+        to_html,
+        to_pdf,
+    )
 
     package = build_package(
         [rerun.calc.record for rerun in reruns], [rerun.calc.walk for rerun in reruns]
@@ -99,7 +104,24 @@ def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Pat
     }
     for rerun in reruns:
         printed[folder / f"{rerun.path.stem}.json"] = f"{rerun.calc.record.to_text()}\n".encode()
+    for rerun in reruns:
+        own = {folder / n: c for n, c in calc_files(rerun.calc.record.data).items()}
+        _refuse_twice(rerun.calc.record.calc_id, own, printed)
+        printed |= own
     return printed
+
+
+def _refuse_twice(calc_id: str, own: Iterable[Path], others: Iterable[Path]) -> None:
+    """Refuse a drawing or table named like one of another calc; case does not tell them apart."""
+    taken = {path.name.casefold() for path in others}
+    faults = FaultList()
+    for path in own:
+        if path.name.casefold() in taken:
+            faults.add(
+                f"{calc_id}: {path.name} is already a file of another calc of the package; "
+                "give the calcs ids that differ in letters or digits"
+            )
+    faults.raise_if_any()
 
 
 def _report(reruns: Sequence[Rerun], files: dict[Path, bytes]) -> int:

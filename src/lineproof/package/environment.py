@@ -25,6 +25,7 @@ from lineproof.typeset.nodes import (
     Fence,
     Fraction,
     Letter,
+    Math,
     Prime,
     Root,
     Row,
@@ -33,18 +34,22 @@ from lineproof.typeset.nodes import (
     Thin,
     Unit,
     Word,
+    row,
 )
 from lineproof.typeset.plain import plain
+from lineproof.typeset.rows import FAILS_WORD, fails
 from lineproof.typeset.typst_tree import typst_tree
 
 if TYPE_CHECKING:
     import jinja2
 
-    from lineproof.package.model import Calc
+    from lineproof.package.calc import Calc
+    from lineproof.package.summary import PartSummary
 
 _NODES = (
     Digits, Fence, Fraction, Letter, Prime, Root, Row, Scripts, Sign, Thin, Unit, Word,
 )  # fmt: skip
+_TEXT_SIZES = ((6, "9"), (8, "8.5"), (10, "8"), (12, "7.5"), (10_000, "7"))
 _LONG_WORD = re.compile(r"\S{40}")
 
 
@@ -185,9 +190,27 @@ def _filters() -> dict[str, Any]:
         "sentence": lambda text: text[:1].upper() + text[1:],
         "yes_no": lambda truth: "yes" if truth else "no",
         "verdict": _verdict,
+        "checks_text": _checks_text,
         "length_class": _length_class,
+        "fails": fails,
+        "heading": _heading,
+        "text_size": _text_size,
         "covered_text": lambda item: f"{item.check} ({item.clause})" if item.clause else item.check,
     }
+
+
+def _heading(math: Math) -> tuple[Math | None, str]:
+    """Part a heading into its symbol and the words after it, which may wrap."""
+    if isinstance(math, Word):
+        return None, math.text
+    if isinstance(math, Row) and isinstance(math.items[-1], Word):
+        return row(math.items[:-1]), math.items[-1].text
+    return math, ""
+
+
+def _text_size(columns: int) -> str:
+    """Return the text size of a table, in points: the more columns, the smaller."""
+    return next(size for most, size in _TEXT_SIZES if columns <= most)
 
 
 def _length_class(title: str) -> str:
@@ -198,9 +221,18 @@ def _length_class(title: str) -> str:
 def _verdict(calc: Calc) -> str:
     """Say in one sentence whether the calc's checks hold."""
     count, failed = len(calc.summary), len(calc.failures)
+    if not count:
+        return "No checks."
     if failed:
         return f"{failed} of {count} checks {'does' if failed == 1 else 'do'} not hold."
     return "The one check holds." if count == 1 else f"All {count} checks hold."
+
+
+def _checks_text(part: PartSummary) -> str:
+    """Say how many checks of a part hold."""
+    if part.failed:
+        return f"{part.failed} of {part.count} {FAILS_WORD if part.failed == 1 else 'FAIL'}"
+    return "holds" if part.count == 1 else f"all {part.count} hold"
 
 
 def _script_json(text: str) -> str:

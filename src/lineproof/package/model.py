@@ -7,14 +7,21 @@ from dataclasses import dataclass, replace
 from typing import Any
 
 from lineproof.errors import FaultList, UserError
+from lineproof.package.calc import Calc, NotCovered, PartBlock, ProseBlock
 from lineproof.package.facts import FINAL_STATUSES, ProjectFacts, project_facts
+from lineproof.package.files import file_name
+from lineproof.package.merged import (
+    ScopeBox,
+    ToConfirm,
+    scopes,
+    to_confirm,
+    unconfirmed,
+    uncovered,
+)
 from lineproof.package.prose import Mark, Prose, read_prose
 from lineproof.package.summary import (
-    Confirmation,
     Failure,
-    LoadRow,
     NotationRow,
-    SummaryRow,
     confirmations,
     failures,
     load_rows,
@@ -50,75 +57,6 @@ CAUTIONS = (
 
 
 @dataclass(frozen=True, slots=True)
-class PartBlock:
-    """A part of the working: its rows under its heading."""
-
-    key: str
-    anchor: str
-    label: str
-    title: str
-    rows: tuple[PrintedRow, ...]
-
-
-@dataclass(frozen=True, slots=True)
-class ProseBlock:
-    """Prose between parts."""
-
-    prose: Prose
-
-
-@dataclass(frozen=True, slots=True)
-class NotCovered:
-    """A check that a complete calc holds and this one does not yet."""
-
-    check: str
-    clause: str
-
-
-@dataclass(frozen=True, slots=True)
-class Calc:
-    """One calculation of the package."""
-
-    id: str
-    title: str
-    anchor: str
-    member: str
-    digest: str
-    record_text: str
-    blocks: tuple[PartBlock | ProseBlock, ...]
-    summary: tuple[SummaryRow, ...]
-    loads: tuple[LoadRow, ...]
-    section: PrintedRow | None
-    loading: tuple[PrintedRow, ...]
-    failures: tuple[Failure, ...]
-    confirm: tuple[Confirmation, ...]
-    scope: str
-    not_covered: tuple[NotCovered, ...]
-    marks: Mapping[str, tuple[str, ...]]
-    statements: tuple[str, ...]
-
-    @property
-    def unconfirmed(self) -> str:
-        """Say how many clauses rest on memory and are not confirmed by the office; "" if none."""
-        count = sum(not item.confirmed for item in self.confirm)
-        if not count:
-            return ""
-        are = "clause is" if count == 1 else "clauses are"
-        return (
-            f"{count} {are} taken from memory of the standards and not yet confirmed by the "
-            "office: see Values to confirm."
-        )
-
-    @property
-    def in_front(self) -> frozenset[str]:
-        """Ids of the figures that stand before the working and are not repeated in it."""
-        shown = [figure.id for figure in self.loading]
-        # The section is drawn on the summary page, which exists only where checks do.
-        shown += [self.section.id] if self.section is not None and self.summary else []
-        return frozenset(shown)
-
-
-@dataclass(frozen=True, slots=True)
 class Package:
     """A whole package: the project's facts once, then one or many calcs."""
 
@@ -133,6 +71,33 @@ class Package:
     def failures(self) -> tuple[Failure, ...]:
         """The checks of all calcs that do not hold."""
         return tuple(failure for calc in self.calcs for failure in calc.failures)
+
+    @property
+    def contents_lines(self) -> int:
+        """About how many lines the contents have; long ones are set smaller."""
+        parts = sum(isinstance(b, PartBlock) for calc in self.calcs for b in calc.blocks)
+        tables = sum(printed.kind == "table" for calc in self.calcs for printed in calc.front)
+        return parts + tables + 4 * len(self.calcs) + 5
+
+    @property
+    def scopes(self) -> tuple[ScopeBox, ...]:
+        """What is preliminary and not covered yet, each once."""
+        return scopes(self.calcs)
+
+    @property
+    def not_covered(self) -> tuple[ScopeBox, ...]:
+        """What is not covered yet, each list once."""
+        return uncovered(self.calcs)
+
+    @property
+    def to_confirm(self) -> tuple[ToConfirm, ...]:
+        """The clauses to confirm, each once over all calcs."""
+        return to_confirm(self.calcs)
+
+    @property
+    def unconfirmed(self) -> str:
+        """Say how many clauses the office has not confirmed yet; "" if none."""
+        return unconfirmed(self.to_confirm)
 
     @property
     def digest(self) -> str:
@@ -156,9 +121,8 @@ def build_package(
         raise UserError("package: no record; give at least one calc")
     faults = FaultList()
     calcs = []
-    for place, record in enumerate(data):
+    for place, (record, prefix) in enumerate(zip(data, _prefixes(data), strict=True)):
         walk = walks[place] if walks is not None else None
-        prefix = f"{_slug(record['calc']['id'])}/" if len(data) > 1 else ""
         calcs.append(_Builder(record, prefix, marks or {}, faults).calc(walk))
     facts = project_facts(data[0]["project"], data[0]["codes"])
     _check_status(facts.status, calcs, faults)
@@ -187,10 +151,19 @@ def _plain_data(record: Any) -> Mapping[str, Any]:
     return data
 
 
-def _slug(text: str) -> str:
-    return (
-        "".join(c if c.isascii() and (c.isalnum() or c in "-_.") else "-" for c in text) or "calc"
-    )
+def _prefixes(data: Sequence[Mapping[str, Any]]) -> list[str]:
+    """Return what stands before the anchors of each calc: its id, made unlike any other."""
+    if len(data) == 1:
+        return [""]
+    names: list[str] = []
+    for record in data:
+        name = base = file_name(record["calc"]["id"])
+        number = 1
+        while name in names:
+            number += 1
+            name = f"{base}.{number}"
+        names.append(name)
+    return [f"{name}/" for name in names]
 
 
 class _Builder:
@@ -218,7 +191,9 @@ class _Builder:
     def calc(self, walk: Walk | None) -> Calc:
         record, rows = self.record, list(self.rows.values())
         status = record["status"]
-        figures = [r for r in rows if r.kind == "figure"]
+        front = sorted((r for r in rows if r.front is not None), key=_front_key)
+        # A calc that says what stands in front says it all.
+        figures = [r for r in rows if r.kind == "figure" and not front]
         return Calc(
             id=record["calc"]["id"],
             title=record["calc"].get("title", ""),
@@ -228,7 +203,7 @@ class _Builder:
             record_text=json_text(record),
             blocks=self._blocks(walk),
             summary=summary_rows(record["parts"], self.rows, self.notation, self.prefix),
-            loads=load_rows(record["parts"], self.rows, self.prefix),
+            loads=() if front else load_rows(record["parts"], self.rows, self.prefix),
             section=next((f for f in figures if f.id.endswith("/section")), None),
             loading=tuple(f for f in figures if f.id.endswith(("/plan", "/loading"))),
             failures=failures(record, self.rows, self.prefix),
@@ -240,6 +215,7 @@ class _Builder:
             ),
             marks={entry_id: tuple(notes) for entry_id, notes in self.marks.items()},
             statements=tuple(r.text for r in rows if r.id.endswith("/bars-text")),
+            front=tuple(front),
         )
 
     def _blocks(self, walk: Walk | None) -> tuple[PartBlock | ProseBlock, ...]:
@@ -301,6 +277,10 @@ class _Builder:
             title=part.get("title", ""),
             rows=_once_named([self.rows[entry["id"]] for entry in part["entries"]]),
         )
+
+
+def _front_key(printed: PrintedRow) -> int:
+    return printed.front or 0
 
 
 def _once_named(rows: Iterable[PrintedRow]) -> tuple[PrintedRow, ...]:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
+from itertools import groupby
 from typing import Any
 
 from lineproof.formula.grammar import parse_criterion
@@ -32,6 +33,20 @@ class SummaryRow:
     verdict: str
     holds: bool
     group: str
+    utilisation: float | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class PartSummary:
+    """The checks of one part in one row: how many, how many fail, the one nearest its limit.
+
+    Where no check has a utilisation, the first one stands for them.
+    """
+
+    group: str
+    count: int
+    failed: int
+    governing: SummaryRow
 
 
 @dataclass(frozen=True, slots=True)
@@ -102,9 +117,25 @@ def summary_rows(
                 verdict=printed.verdict,
                 holds=printed.holds,
                 group=group,
+                utilisation=entry.get("utilisation"),
             )
         )
     return tuple(made)
+
+
+def part_summaries(rows: Sequence[SummaryRow]) -> tuple[PartSummary, ...]:
+    """Return one row for the checks of each part, in the order of the parts."""
+    made = []
+    for group, found in groupby(rows, key=lambda row: row.group):
+        checks = list(found)
+        failed = [row for row in checks if not row.holds]
+        governing = max(failed or checks, key=_nearness)
+        made.append(PartSummary(group, len(checks), len(failed), governing))
+    return tuple(made)
+
+
+def _nearness(check: SummaryRow) -> float:
+    return -1.0 if check.utilisation is None else check.utilisation
 
 
 def _sides(entry: Mapping[str, Any], notation: Notation) -> tuple[Math, Math]:

@@ -5,8 +5,9 @@ A row holds nodes and plain texts only; how they are laid out is the business of
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Any
 
 from lineproof.formula import FROM_MEMORY
@@ -28,7 +29,12 @@ from lineproof.typeset.values import (
 
 Entry = Mapping[str, Any]
 
+_SYMBOL = re.compile(r"[A-Za-z][A-Za-z0-9]*_[A-Za-z0-9_]+\Z", re.ASCII)
+"""A word of a heading that is no word but a symbol with a subscript."""
 _SILENT_BASES = frozenset({"", FROM_MEMORY, "mechanics"})
+FAILS_WORD = "FAILS"
+"""How a cell of a table says that a check does not hold."""
+_NO_FIGURE = frozenset({"", "-", "–", "—", FAILS_WORD})
 HOLDS, FAILS, ACCEPTED = "holds", "does not hold", "accepted, does not hold"
 
 
@@ -43,11 +49,17 @@ class Origin:
 
 @dataclass(frozen=True, slots=True)
 class PrintedTable:
-    """A table: headings as nodes or text, cells as printed text, which columns hold numbers."""
+    """A table: headings as nodes or text, cells as printed text, which columns hold numbers.
+
+    ``widths`` are mm on paper as text, "" for what the texts need; ``lines`` give id and label of
+    the line that each row shows, ("", "") for none.
+    """
 
     columns: tuple[Math, ...]
     rows: tuple[tuple[str, ...], ...]
     numeric: tuple[bool, ...]
+    widths: tuple[str, ...] = ()
+    lines: tuple[tuple[str, str], ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,6 +91,7 @@ class PrintedRow:
     figure: Mapping[str, Any] | None = field(default=None, hash=False)
     caption: str = ""
     alt: str = ""
+    front: int | None = None
 
     @property
     def holds(self) -> bool:
@@ -119,6 +132,9 @@ def printed_row(
         "table": _table,
     }
     own = makers[entry["kind"]](entry, notation)
+    if "lines" in entry:
+        lines = tuple((line, (labels or {}).get(line, "")) for line in entry["lines"])
+        own["table"] = replace(own["table"], lines=lines)
     return PrintedRow(
         id=entry["id"],
         kind=entry["kind"],
@@ -128,6 +144,7 @@ def printed_row(
         remarks=tuple(own.pop("remarks", ())),
         basis=_basis(entry),
         origins=_origins(entry.get("args", {}), notation, labels or {}),
+        front=entry.get("front"),
         **own,
     )
 
@@ -280,16 +297,39 @@ def _table(entry: Entry, notation: Notation) -> dict[str, Any]:
     columns = tuple(heading_math(column, notation) for column in entry["columns"])
     rows = tuple(tuple(number_text(cell) for cell in line) for line in entry["rows"])
     numeric = tuple(
-        all(is_number(line[place]) for line in entry["rows"] if line[place])
-        for place in range(len(columns))
+        all(_is_figure(line[place]) for line in entry["rows"]) for place in range(len(columns))
     )
-    return {"table": PrintedTable(columns, rows, numeric)}
+    widths = tuple(f"{width:g}" if width else "" for width in entry.get("widths", ()))
+    return {"table": PrintedTable(columns, rows, numeric, widths or ("",) * len(columns))}
+
+
+def fails(cell: str) -> bool:
+    """Tell whether a cell of a table says that a check fails.
+
+    >>> fails("FAILS"), fails("1.04 FAILS"), fails("fails")
+    (True, True, False)
+    """
+    return cell.endswith(FAILS_WORD)
+
+
+def _is_figure(cell: str) -> bool:
+    """Tell whether a cell leaves its column one of numbers."""
+    return cell in _NO_FIGURE or is_number(cell.removesuffix(FAILS_WORD).rstrip())
 
 
 def heading_math(text: str, notation: Notation) -> Math:
-    """Typeset a column heading: "M_r, kN.m" becomes symbol and unit, other text stays text."""
-    head, comma, unit = (part.strip() for part in text.partition(","))
-    if head not in notation:
-        return Word(text)
-    symbol = symbol_math(notation[head])
-    return row([symbol, Word(", " + unit_text(unit))]) if comma and unit else symbol
+    """Typeset a column heading: "M_r, kN.m" becomes symbol and unit, other text stays text.
+
+    The unit after the last comma is typeset in any case, a symbol also where words follow it.
+    """
+    head, comma, unit = (part.strip() for part in text.rpartition(","))
+    if not comma or unit not in UNITS:
+        head, unit = text.strip(), ""
+    tail = f", {unit_text(unit)}" if unit else ""
+    first, _, rest = head.partition(" ")
+    if head in notation:
+        symbol = symbol_math(notation[head])
+        return row([symbol, Word(tail)]) if tail else symbol
+    if _SYMBOL.match(first):
+        return row([symbol_math(symbol_of(first, notation)), Word(f" {rest}".rstrip() + tail)])
+    return Word(head + tail)

@@ -1,0 +1,72 @@
+"""Figures and tables of a record as files of their own: DXF and CSV."""
+
+from __future__ import annotations
+
+import codecs
+import csv
+import io
+import re
+from collections.abc import Mapping
+from typing import Any
+
+from lineproof.drawing import dxf, from_json
+from lineproof.record.validate_shown import FILES
+
+_NUMBER = re.compile(r"[+-]?\d+(?:\.\d+)?(?:[eE][+-]?\d+)?\Z", re.ASCII)
+_STARTS_A_FORMULA = ("=", "+", "-", "@", "\t", "\r", "\n", "＝", "＋", "－", "＠")
+"""With one of these a spreadsheet takes a cell for a formula."""
+_PLAIN = str.maketrans({"−": "-", "\u2009": "", "\u202f": ""})
+_LONGEST = 60
+
+
+def file_name(calc_id: str) -> str:
+    """Return a calc's id as the beginning of a file name.
+
+    >>> file_name("B 7/a")
+    'B-7-a'
+    """
+    plain = "".join(c if c.isascii() and (c.isalnum() or c in "-_.") else "-" for c in calc_id)
+    return plain.lstrip(".")[:_LONGEST] or "calc"
+
+
+def calc_files(record: Mapping[str, Any]) -> dict[str, bytes]:
+    """Return the files that a record's figures and tables ask for, by name."""
+    start = file_name(record["calc"]["id"])
+    return {
+        f"{start}-{entry[ending]}.{ending}": _WRITERS[ending](entry)
+        for part in record["parts"]
+        for entry in part["entries"]
+        if (ending := FILES.get(entry["kind"], "")) and entry.get(ending)
+    }
+
+
+def _drawing(entry: Mapping[str, Any]) -> bytes:
+    return dxf(from_json(entry["figure"]))
+
+
+def table_csv(entry: Mapping[str, Any]) -> bytes:
+    """Return a table as CSV by RFC 4180, in UTF-8.
+
+    It begins with the mark of UTF-8, without which spreadsheets read "Ø" and "²" in the code page
+    of the machine.
+    """
+    stream = io.StringIO(newline="")
+    writer = csv.writer(stream, lineterminator="\r\n")
+    writer.writerow(map(_cell, entry["columns"]))
+    writer.writerows([_cell(text) for text in row] for row in entry["rows"])
+    return codecs.BOM_UTF8 + stream.getvalue().encode()
+
+
+def _cell(text: str) -> str:
+    """Return a cell that a spreadsheet reads as a number or as text, never as a formula.
+
+    >>> _cell("−12.5"), _cell("=1+1"), _cell("-2+3")
+    ('-12.5', "'=1+1", "'-2+3")
+    """
+    number = text.translate(_PLAIN)
+    if _NUMBER.match(number):
+        return number
+    return f"'{text}" if text.lstrip(" ").startswith(_STARTS_A_FORMULA) else text
+
+
+_WRITERS = {"dxf": _drawing, "csv": table_csv}
