@@ -94,9 +94,17 @@ def _record_modulus(sheet: Sheet, density: str) -> None:
 class Exposed(Protocol):
     """What cover rests on: exposure class, fire rating and type of concrete, a slab or none."""
 
-    exposure: str
-    fire_rating: str
-    fire_aggregate: str
+    @property
+    def exposure(self) -> str:
+        """Exposure class."""
+
+    @property
+    def fire_rating(self) -> str:
+        """Row of the fire tables."""
+
+    @property
+    def fire_aggregate(self) -> str:
+        """Type of concrete in the fire tables."""
 
     @property
     def slab(self) -> bool:

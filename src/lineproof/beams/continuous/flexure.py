@@ -18,6 +18,7 @@ from lineproof.beams.continuous.bar_choice import (
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.numbers import Numbers
 from lineproof.beams.continuous.restraint import record_restraint, restraint_moment
@@ -358,7 +359,7 @@ def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry]) -> 
         steps.check(minimum.SPREAD)
 
 
-def refuse_failing(chosen: Mapping[int, Chosen], what: str) -> None:
+def refuse_unfit(chosen: Mapping[int, Chosen], what: str) -> None:
     """Refuse given bars that do not fit into the web: nothing could be printed of them."""
     faults = FaultList()
     for made in chosen.values():
@@ -374,9 +375,15 @@ def refuse_failing(chosen: Mapping[int, Chosen], what: str) -> None:
     faults.raise_if_any()
 
 
-def places(model: Model) -> Iterator[str]:
+def part_keys(inputs: ContinuousInputs) -> Iterator[str]:
     """Give the keys of all parts of flexure, in their order."""
-    for span in sagging_spans(model):
-        yield f"sag-{span}"
-    for face in faces_of(model):
-        yield face.key
+    count = len(inputs.spans)
+    free = [support.kind == "free" for support in inputs.supports]
+    for span in range(1, count + 1):
+        if not (free[span - 1] or free[span]):
+            yield f"sag-{span}"
+    for support in range(1, count + 2):
+        if not free[support - 1]:
+            sides: tuple[End, ...] = ("left", "right")
+            faces = (Face(support, side) for side in sides)
+            yield from (face.key for face in faces if 1 <= face.span <= count)

@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
 
+from lineproof.beams.analysis.model import Beam, Span, Support
 from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
 from lineproof.beams.continuous.typed_beam import (
     TypedLoad,
@@ -195,7 +196,11 @@ def _check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Fau
 
 
 def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
-    """Refuse slabs thicker than the beam, supports that meet, and deep beams."""
+    """Refuse beams that cannot stand, slabs thicker than the beam, and deep beams."""
+    try:
+        _stand_in(fields)
+    except UserError as error:
+        faults.take(error)
     supports: tuple[TypedSupport, ...] = fields["supports"]
     h_f: Typed | None = fields["h_f"]
     halves = [0.0 if s.width is None else s.width.value / 2 for s in supports]
@@ -208,13 +213,20 @@ def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
                 "thinner slab or a deeper beam"
             )
         clear = length.value - halves[number - 1] - halves[number]
-        if clear <= 0:
-            faults.add(
-                f"supports: {number} and {number + 1} leave nothing of span {number} of "
-                f"{length.text}; write narrower supports or a longer span"
-            )
-        elif "free" not in (supports[number - 1].kind, supports[number].kind):
+        if clear > 0 and "free" not in (supports[number - 1].kind, supports[number].kind):
             _check_depth(number, clear, depth, faults)
+
+
+def _stand_in(fields: Mapping[str, Any]) -> Beam:
+    """Return the beam with one stiffness throughout: whether it can stand shows with any."""
+    supports: tuple[TypedSupport, ...] = fields["supports"]
+    return Beam(
+        tuple(Span(length.value, 1e13) for length in fields["spans"]),
+        tuple(
+            Support(s.kind, 0.0 if s.width is None else s.width.value, 1e9 * (s.kind == "elastic"))
+            for s in supports
+        ),
+    )
 
 
 def _check_depth(number: int, clear: float, depth: Typed, faults: FaultList) -> None:

@@ -1,0 +1,171 @@
+"""A beam of any number of spans: each call records one chapter of the calculation."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from typing import Any
+
+from lineproof.beams import basics
+from lineproof.beams.continuous import flexure
+from lineproof.beams.continuous import loads as load_take_down
+from lineproof.beams.continuous.bar_choice import Chosen, TopBars
+from lineproof.beams.continuous.cover import record_cover
+from lineproof.beams.continuous.geometry import record_spans
+from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
+from lineproof.beams.continuous.model import (
+    ANALYSIS,
+    COLUMNS,
+    GIVEN,
+    LOADS,
+    Model,
+    model_of,
+    span_key,
+)
+from lineproof.beams.continuous.statics import record_analysis
+from lineproof.beams.floor_beam import prepare
+from lineproof.quantity import QuantityInput
+from lineproof.sheet import Sheet
+from lineproof.standards.codes import CodePair
+
+QuantityOrList = QuantityInput | Sequence[QuantityInput]
+
+
+class ContinuousBeam:
+    """A beam on a sheet.
+
+    It keeps nothing but the sheet, the checked inputs and the code pair: every number stands on
+    the sheet, so that cells may be run again in any order.
+    """
+
+    def __init__(self, sheet: Sheet, inputs: ContinuousInputs, pair: CodePair) -> None:
+        self.sheet, self.inputs, self.pair = sheet, inputs, pair
+
+    @property
+    def model(self) -> Model:
+        """The beam as analysed, from what stands on the sheet."""
+        return model_of(self.sheet, self.inputs)
+
+    def loads(self) -> None:
+        """Record the columns that hold the beam and the load take-down."""
+        load_take_down.record_columns(self.sheet, self.inputs)
+        load_take_down.record_loads(self.sheet, self.inputs, self.pair)
+
+    def spans(self) -> None:
+        """Record clear length, effective flange and gross section of every span."""
+        record_spans(self.sheet, self.inputs)
+
+    def analysis(self) -> None:
+        """Record the support moments and reactions by load type."""
+        record_analysis(self.model)
+
+    def flexure(self) -> None:
+        """Record bars and resistance at every span and both faces of every support."""
+        model = self.model
+        bottom, top = self._bars(model)
+        sizes = [layer.size for c in bottom.values() for layer in _layers(c)]
+        sizes += [_top(c).web.size for c in top.values()]
+        record_cover(self.sheet, self.inputs, sizes)
+        for span, chosen in bottom.items():
+            flexure.record_sag(model, span, _layers(chosen), self.pair)
+        for support in range(1, model.spans + 2):
+            if self.inputs.supports[support - 1].kind != "free":
+                bars = _top(top[support]) if support in top else None
+                flexure.record_hog(model, support, bars, self.pair)
+
+    def _bars(self, model: Model) -> tuple[dict[int, Chosen], dict[int, Chosen]]:
+        bottom = flexure.choose_bottom(model, self.pair)
+        top = flexure.choose_top(model, self.pair)
+        flexure.refuse_unfit(bottom, "bottom_bars")
+        flexure.refuse_unfit(top, "top_bars")
+        return bottom, top
+
+
+def _layers(chosen: Chosen) -> Any:
+    return chosen.bars
+
+
+def _top(chosen: Chosen) -> TopBars:
+    if not isinstance(chosen.bars, TopBars):
+        msg = f"{chosen.section} has no top bars"
+        raise TypeError(msg)
+    return chosen.bars
+
+
+def continuous_beam(
+    sheet: Sheet,
+    *,
+    spans: Sequence[QuantityInput],
+    supports: Sequence[str],
+    h: QuantityOrList,
+    b_w: QuantityInput,
+    h_f: QuantityInput | None,
+    spacing: QuantityInput,
+    f_c: QuantityInput,
+    grade: str,
+    superimposed: QuantityInput,
+    use: str,
+    exposure: str,
+    fire_rating: QuantityInput,
+    cover: QuantityInput,
+    columns: Mapping[int, Sequence[str] | str] | None = None,
+    shape: str = "T",
+    tributary_width: QuantityInput | None = None,
+    partitions: QuantityInput | None = None,
+    live_load: QuantityInput | None = None,
+    snow: QuantityInput | None = None,
+    floor_weight: QuantityInput | None = None,
+    reduce_live_load: bool = False,
+    loads: Sequence[Mapping[str, Any]] = (),
+    construction_load: QuantityInput | None = None,
+    density: str = "normal",
+    gamma_c: QuantityInput = "2400 kg/m3",
+    aggregate: QuantityInput = "20 mm",
+    fire_aggregate: str = "S",
+    stirrup: str = "10M",
+    shear_method: str = "general",
+    bottom_bars: Sequence[str | None] | str | None = None,
+    top_bars: Sequence[str | None] | str | None = None,
+    minimum_rule: str = "10.5.1.2",
+    carries: str = "roof or floor with parts attached that deflection damages",
+    sustained: QuantityInput | None = None,
+    web_openings: str = "none",
+) -> ContinuousBeam:
+    """Start a beam of one or more spans: check all inputs, record them and the materials.
+
+    ``spans`` and ``supports`` go from left to right; a support is typed ``'column 450 mm'``,
+    ``'girder 400 mm'``, ``'wall 300 mm'`` (``, fixed`` where it holds the beam against turning) or
+    ``'free'`` at the end of a cantilever. ``columns`` holds, by number of the support, the columns
+    below and above that hold the beam elastically. ``loads`` are those beside the floor:
+    ``{'type': 'L', 'span': 2, 'point': '40 kN', 'at': '3.1 m', 'what': 'beam B12'}``. Bars left
+    out are chosen. Raises :class:`UserError` with every fault at once, before anything is recorded.
+    """
+    given: dict[str, Any] = dict(locals())
+    inputs, pair = read_inputs(given, sheet.project)
+    prepare(sheet, pair)
+    sheet.member = member_of(inputs)
+    beam = ContinuousBeam(sheet, inputs, pair)
+    sheet.expect(calls_of(inputs))
+    load_take_down.record_given(sheet, inputs)
+    basics.record_materials(sheet, inputs.density, inputs.grade, pair)
+    return beam
+
+
+def member_of(inputs: ContinuousInputs) -> str:
+    """Say what kind of beam it is."""
+    count = len(inputs.spans)
+    spans = "one span" if count == 1 else f"{count} spans"
+    return f"beam of {spans}, {inputs.shape} section"
+
+
+def calls_of(inputs: ContinuousInputs) -> dict[str, str]:
+    """Return the call that makes each part, in the order of the calculation."""
+    count = len(inputs.spans)
+    start = "continuous_beam(...)"
+    calls = {GIVEN: start, basics.MATERIALS: start}
+    if any(support.columns for support in inputs.supports):
+        calls[COLUMNS] = "beam.loads()"
+    calls[LOADS] = "beam.loads()"
+    calls |= {span_key(k): "beam.spans()" for k in range(1, count + 1)}
+    calls[ANALYSIS] = "beam.analysis()"
+    calls[basics.COVER] = "beam.flexure()"
+    return calls | dict.fromkeys(flexure.part_keys(inputs), "beam.flexure()")
