@@ -90,6 +90,7 @@ def _drawn(shape: BentShape, layer: Layer) -> tuple[Drawn, float, float]:
         )
         width = min(max(HEIGHT * wide / high, NARROWEST), WIDEST)
     side, base = HEIGHT - 2 * RADIUS, width - 2 * RADIUS
+    straights: tuple[float, ...]
     match shape.form:
         case "open stirrup":
             start, heading = (RADIUS + STIRRUP_HOOK, HEIGHT), 180.0
