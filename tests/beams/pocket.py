@@ -21,6 +21,7 @@ _OPERATORS: dict[type, Callable[[Any, Any], Any]] = {
 }  # fmt: skip
 _FUNCTIONS: dict[str, Callable[..., Number]] = {
     "sqrt": math.sqrt, "max": max, "min": min, "abs": abs,
+    "cot": lambda angle: 1 / math.tan(math.radians(angle)),
 }  # fmt: skip
 
 # One printed unit in units of the system that the arguments are printed in.
@@ -29,6 +30,7 @@ FACTORS: dict[str, dict[str, Fraction]] = {
         "": Fraction(1), "mm": Fraction(1), "mm2": Fraction(1), "mm4": Fraction(1),
         "MPa": Fraction(1), "N": Fraction(1), "N/mm": Fraction(1), "N.mm": Fraction(1),
         "m": Fraction(1000), "kN": Fraction(1000), "kN.m": Fraction(10**6), "kN/m": Fraction(1),
+        "deg": Fraction(1), "mm2/mm": Fraction(1),
     },
     "kN-m": {
         "": Fraction(1), "m": Fraction(1), "kN": Fraction(1), "kN.m": Fraction(1),

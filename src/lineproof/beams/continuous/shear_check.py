@@ -62,7 +62,11 @@ class SpanCheck:
     @cached_property
     def owners(self) -> Indices:
         """The band that counts at each column: where two meet, the one of the wider spacing."""
-        return np.array([self._owner(u) for u in self.u.tolist()])
+        made = np.zeros(len(self.u), dtype=np.intp)
+        for n in sorted(range(len(self.bands)), key=lambda n: self.bands[n].spacing):
+            band = self.bands[n]
+            made[(self.u >= band.start - _NEAR) & (self.u <= band.end + _NEAR)] = n
+        return made
 
     def _owner(self, u: float) -> int:
         inside = [n for n, b in enumerate(self.bands) if b.start - _NEAR <= u <= b.end + _NEAR]
@@ -160,6 +164,19 @@ class SpanCheck:
                 force = np.where(v["bottom"][:, column], made["F_le"][:, column], 0.0)
                 made["bearing"][:, column] = force / (strength * max(end.A_bearing, SMALL))
         return made
+
+    def bar_forces(self) -> tuple[Floats, Floats, Floats]:
+        """Return stations from the left axis and the force bottom and top bars need there [N].
+
+        The largest of all cases, moment, shear and torsion together; zero where torsion does not
+        count, for there longer bars stand for the shear (11.3.9.1).
+        """
+        v = self.state.v
+        here = np.where(v["counts"], self.bars["F_lt"], 0.0)
+        there = np.where(v["counts"], self.bars["F_lc"], 0.0)
+        bottom = np.where(v["bottom"], here, there).max(axis=0)
+        top = np.where(v["bottom"], there, here).max(axis=0)
+        return self.state.columns, bottom, top
 
     def _capped(self, F_lt: Floats) -> Floats:
         """Return the force on the tension side at the ends, capped where 11.3.9.4 lets it."""

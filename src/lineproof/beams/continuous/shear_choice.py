@@ -58,7 +58,8 @@ class Fitting:
 
     def run(self, spacing: float) -> tuple[float, float] | None:
         """Return the longest stretch over which a spacing passes at every station."""
-        passed = np.concatenate([[False], self.passes(spacing), [False]])
+        passed = np.zeros(len(self.u) + 2, dtype=bool)
+        passed[1:-1] = self.passes(spacing)
         edges = np.flatnonzero(passed[1:] != passed[:-1]).reshape(-1, 2)
         if not len(edges):
             return None
@@ -106,7 +107,8 @@ def _pairs(
 ) -> list[_Pair]:
     """Return the pairs of spacings, those that may weigh least first; equals widest first."""
     found = []
-    for spacing in spacings:
+    widest = max(float(fit.allowed.max()) for fit in fits) * _ROOM
+    for spacing in (s for s in spacings if s <= widest):
         runs = tuple(fit.run(spacing) for fit in fits)
         for end in (s for s in closest if s <= spacing):
             if spacing == end or any(runs):

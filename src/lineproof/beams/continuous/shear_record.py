@@ -96,7 +96,7 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
     else:
         _record_stirrups(steps, section)
     record_bars(steps, section)
-    if not section.counts and not section.plain:
+    if not section.counts and not section.plain and section.place != "station":
         _record_other(steps, basis)
 
 
@@ -115,8 +115,6 @@ def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
         steps.line(shear.BETA_GENERAL if section.plain else shear.BETA_STIRRUPS)
         steps.line(shear.THETA)
         return
-    steps.check(shear.GRADE_FOR_SIMPLIFIED)
-    steps.check(shear.CONCRETE_FOR_SIMPLIFIED)
     row = "below minimum stirrups" if section.plain else "minimum stirrups or more"
     steps.bind(theta=steps.sheet.lookup("theta", shear.SIMPLIFIED, row))
     if not section.plain:
@@ -146,6 +144,8 @@ def _record_stirrups(steps: Steps, section: ShearSection) -> None:
     halved = section.counts or bool(steps.decide(shear.CLOSER))
     steps.line(shear.S_MAX_HALVED if halved else shear.S_MAX)
     steps.check(shear.SPACING)
+    if section.counts:
+        steps.check(torsion.CORNER_BARS, d_b=steps.entry("d_bc"))
     if section.spot.change is not None:
         _record_change(steps, section)
     if section.counts:

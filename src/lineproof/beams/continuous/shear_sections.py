@@ -144,10 +144,18 @@ def _section(
     bottom, acting = bool(v["bottom"][row, column]), state.numbers.torsion
     return ShearSection(
         key=key,
-        title=_title(span, end, key, at_end=at_end),
+        title=_title(span, end, key, x if end == "left" else length - x, at_end=at_end),
         span=span,
         end=end,
-        demand=forces.demand(span, x, state.sides[column], row),
+        demand=Demand(
+            span,
+            x,
+            state.sides[column],
+            row,
+            forces.cases[row],
+            float(v["M"][row, column]),
+            float(v["V"][row, column]),
+        ),
         distance=x if end == "left" else length - x,
         place=place,
         reason=reason,
@@ -193,10 +201,11 @@ def _nearer_end(check: SpanCheck, x: float) -> End:
     return "left" if numbers.right.held == "free" or x - start <= end - x else "right"
 
 
-def _title(span: int, end: End, key: str, *, at_end: bool) -> str:
-    place = f"at the {end} support" if at_end else "along the stirrups"
-    further = ", another load case" if at_end and key[-1].isdigit() else ""
-    return f"Shear of span {span} {place}{further}"
+def _title(span: int, end: End, key: str, distance: float, *, at_end: bool) -> str:
+    if not at_end:
+        return f"Shear of span {span}, {distance / 1000:.2f} m from the axis of its {end} support"
+    further = ", another load case" if key[-1].isdigit() else ""
+    return f"Shear of span {span} at its {end} support{further}"
 
 
 def _values(check: SpanCheck, row: int, column: int) -> dict[str, float]:

@@ -20,6 +20,7 @@ from lineproof.beams.continuous.shear_arrays import Truths, holds, sides, value
 from lineproof.beams.continuous.shear_numbers import (
     ShearBasis,
     SpanNumbers,
+    Stretch,
     area_at,
     check_span,
     depth_at,
@@ -141,9 +142,10 @@ def span_state(
     span = numbers.span
     faces = forces.beam.faces(span)
     check_span(numbers, faces[1] - faces[0])
-    left = _critical(basis, numbers, forces, "left", faces[0])
-    right = _critical(basis, numbers, forces, "right", faces[1])
-    x, sides, M, V = _along(forces, span, faces, extra)
+    ends = [_End.of(numbers, "left", faces[0]), _End.of(numbers, "right", faces[1])]
+    x, sides, M, V = _along(forces, span, faces, (extra, ends))
+    left, right = (_critical(basis, end, forces, M, V, 3 * n) for n, end in enumerate(ends))
+    x, sides, M, V = x[6:], sides[6:], M[:, 6:], V[:, 6:]
     shape = (len(forces.cases), len(x) + 2)
     at = np.empty(shape)
     at[:, 0], at[:, 1:-1], at[:, -1] = left.x, x, right.x
@@ -163,35 +165,64 @@ def span_state(
     room = 1e-6
     before, after = at < left.x[:, None] - room, at > right.x[:, None] + room
     before[:, 0] = after[:, 0] = before[:, -1] = after[:, -1] = False
-    for name in (
-        "needed",
-        "s_max",
-        "section",
-        "eps_asked",
-        "V_rmax",
-        "V_c",
-        "V_plain",
-        "V_f",
-        "cot",
-        "counts",
-    ):
+    for name in ("needed", "s_max", "section", "eps_asked", "V_rmax", "V_c", "V_plain", "V_f",
+                 "cot", "counts"):  # fmt: skip
         v[name] = np.where(before, v[name][:, :1], np.where(after, v[name][:, -1:], v[name]))
     sides = ("left", *sides, "right")
-    return SpanState(basis, numbers, forces.cases, faces, x, sides, left, right, v, before | after)
+    cases = forces.cases
+    return SpanState(basis, numbers, cases, faces, x, sides, left, right, v, before | after)
+
+
+@dataclass(frozen=True, slots=True)
+class _End:
+    """One end of a span: depths to the bottom and top bars there, and d_v for each."""
+
+    numbers: SpanNumbers
+    end: End
+    face: float
+    depths: tuple[float, float]
+    d_v: tuple[float, float]
+
+    @classmethod
+    def of(cls, numbers: SpanNumbers, end: End, face: float) -> _End:
+        depths = _depth(numbers.bottom, face), _depth(numbers.top, face)
+        d_v = shear.D_V.function(depths[0], numbers.h), shear.D_V.function(depths[1], numbers.h)
+        return cls(numbers, end, face, depths, d_v)
+
+    @property
+    def stations(self) -> list[float]:
+        """The face, d_v of the bottom bars from it, d_v of the top bars from it."""
+        inward = 1.0 if self.end == "left" else -1.0
+        return [self.face, *(self.face + inward * each for each in self.d_v)]
+
+
+def _depth(bars: tuple[Stretch, ...], x: float) -> float:
+    """Return the depth to the bars of a face at one station; outside them that of the nearest."""
+    return min(bars, key=lambda s: max(s.start - x, x - s.end)).d
 
 
 def _along(
-    forces: Forces, span: int, faces: tuple[float, float], extra: tuple[float, ...]
+    forces: Forces,
+    span: int,
+    faces: tuple[float, float],
+    more: tuple[tuple[float, ...], list[_End]],
 ) -> tuple[Floats, tuple[Side, ...], Floats, Floats]:
-    """Return stations from face to face with M and V; beside a load on both sides of it."""
+    """Return stations with M and V: first those of the two ends, then from face to face.
+
+    Those of the ends stand on the outer side of a load there; a load on the span stands between
+    two stations.
+    """
+    extra, ends = more
     curves = forces.solved.solution.span(span)
     steps = np.arange(faces[0], faces[1], STEP)
     inner = [b for b in curves.breaks.tolist() if faces[0] < b < faces[1]]
-    right = np.array(sorted({*steps.tolist(), faces[1], *inner, *extra}))
-    left = np.array([*inner, faces[1]])
-    pairs = [forces.along(span, left, "left"), forces.along(span, right, "right")]
-    x = np.concatenate([left, right])
-    order = np.argsort(x, kind="stable")
+    right = [*ends[1].stations, *sorted({*steps.tolist(), faces[1], *inner, *extra})]
+    left = [*ends[0].stations, *inner, faces[1]]
+    pairs = forces.along(span, np.array(left), "left"), forces.along(span, np.array(right), "right")
+    x = np.array([*left, *right])
+    order = [0, 1, 2, len(left), len(left) + 1, len(left) + 2]
+    rest = np.array([*range(3, len(left)), *range(len(left) + 3, len(x))])
+    order += rest[np.argsort(x[rest], kind="stable")].tolist()
     M, V = (np.hstack([pair[k] for pair in pairs])[:, order] for k in (0, 1))
     sides: tuple[Side, ...] = tuple("left" if n < len(left) else "right" for n in order)
     return x[order], sides, M, V
@@ -209,37 +240,34 @@ def _torsion_along(
 
 
 def _critical(
-    basis: ShearBasis, numbers: SpanNumbers, forces: Forces, end: End, face: float
+    basis: ShearBasis, end: _End, forces: Forces, M: Floats, V: Floats, first: int
 ) -> Critical:
     """Return the section at an end for every case: at d_v where 11.3.2 lets it, else at the face.
 
-    A case uses the depth of the face in tension. Where its moment changes sign between the face
-    and the section, it uses the smaller depth of the two.
+    The pairs of its three stations stand in the columns from ``first`` on. A case uses the depth
+    of the face in tension. Where its moment changes sign between the face and the section, it uses
+    the smaller depth of the two.
     """
-    inward = 1.0 if end == "left" else -1.0
-    support: Any = numbers.left if end == "left" else numbers.right
-    depths = [float(depth_at(bars, np.array(face))) for bars in (numbers.bottom, numbers.top)]
-    d_v = [float(value(shear.D_V, {"d": d, "h": numbers.h})) for d in depths]
-    xs = np.array([face, *(face + inward * each for each in d_v)])
-    M, V = forces.along(numbers.span, xs, end)
+    M, V = M[:, first : first + 3], V[:, first : first + 3]
     sagging = M >= 0
     bottom: Truths = np.all(sagging, axis=1)
     top: Truths = ~np.any(sagging, axis=1)
-    smaller = int(d_v[1] < d_v[0])
+    smaller = int(end.d_v[1] < end.d_v[0])
     which = np.where(bottom, 0, np.where(top, 1, smaller))
-    d = np.where(bottom, depths[0], np.where(top, depths[1], min(depths)))
-    V_pl = np.array([near_point_loads(forces, numbers.span, end, face, each) for each in d_v])
-    V_pl = np.take_along_axis(V_pl, which[None, :], axis=0)[0]
-    small = holds(
-        shear.NEAR_POINT_LOADS,
-        _materials(basis) | {"V_pl": V_pl, "d_v": np.array(d_v)[which]},
-    )
-    pushed = inward * V[:, 0] > 0
-    reason = tuple(_reason(support.held, *each) for each in zip(pushed, small, strict=True))
-    at_d_v = np.array([not each for each in reason])
-    column = np.where(at_d_v, which + 1, 0)
     rows = np.arange(len(M))
-    return Critical(xs[column], M[rows, column], V[rows, column], d, V_pl, reason, ~(bottom | top))
+    loads = [near_point_loads(forces, end.numbers.span, end.end, end.face, d) for d in end.d_v]
+    V_pl = np.array(loads)[which, rows]
+    d_v = np.array(end.d_v)[which]
+    small = holds(shear.NEAR_POINT_LOADS, _materials(basis) | {"V_pl": V_pl, "d_v": d_v})
+    pushed = V[:, 0] > 0 if end.end == "left" else V[:, 0] < 0
+    support = end.numbers.left if end.end == "left" else end.numbers.right
+    reason = tuple(
+        _reason(support.held, *each) for each in zip(pushed.tolist(), small.tolist(), strict=True)
+    )
+    column = np.where([not each for each in reason], which + 1, 0)
+    d = np.array([*end.depths, min(end.depths)])[np.where(bottom, 0, np.where(top, 1, 2))]
+    x = np.array(end.stations)[column]
+    return Critical(x, M[rows, column], V[rows, column], d, V_pl, reason, ~(bottom | top))
 
 
 def _reason(held: str, pushed: bool, small: bool) -> str:  # noqa: FBT001 - two truths of one case
@@ -256,8 +284,11 @@ def near_point_loads(forces: Forces, span: int, end: End, face: float, d_v: floa
     A load on part of the span that is not longer than d_v counts as a point load.
     """
     rows = forces.solution.rows
+    near = loads_near(forces, span, end, face, d_v)
+    if not near:
+        return np.zeros(len(forces.cases))
     sums = np.zeros(len(rows))
-    for load, size in loads_near(forces, span, end, face, d_v):
+    for load, size in near:
         sums[rows.index((load.kind, span))] += size
     made: Floats = forces.factors @ sums
     return np.abs(made)

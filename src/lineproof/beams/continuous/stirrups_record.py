@@ -53,6 +53,9 @@ def record_stirrups(steps: Steps, choice: Choice, outline: BeamOutline) -> dict[
         "cover lets them.",
         title="Anchorage of the stirrups", clause="12.13", basis=FROM_MEMORY,
     )  # fmt: skip
+    if basis.method == "simplified":
+        steps.check(shear.GRADE_FOR_SIMPLIFIED)
+        steps.check(shear.CONCRETE_FOR_SIMPLIFIED)
     steps.line(shear.SPACING_MINIMUM)
     spacings = [zone.spacing for zone in choice.zones]
     if spacings:

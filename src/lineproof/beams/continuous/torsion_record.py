@@ -97,7 +97,6 @@ def record_torsion_legs(steps: Steps) -> None:
 
     What torsion leaves of the legs stands for A_v from here on.
     """
-    steps.check(clause.CORNER_BARS, d_b=steps.entry("d_bc"))
     steps.lines(clause.LEG_FOR_TORSION, clause.LEGS_FOR_SHEAR, clause.LEGS)
     steps.check(clause.LEGS_PROVIDED)
     steps.check(clause.SECTION)
