@@ -37,7 +37,7 @@ from lineproof.typeset.nodes import (
     row,
 )
 from lineproof.typeset.plain import plain
-from lineproof.typeset.rows import FAILS_WORD, fails
+from lineproof.typeset.rows import FAILS_WORD, PrintedTable, fails
 from lineproof.typeset.typst_tree import typst_tree
 
 if TYPE_CHECKING:
@@ -49,6 +49,7 @@ if TYPE_CHECKING:
 _NODES = (
     Digits, Fence, Fraction, Letter, Prime, Root, Row, Scripts, Sign, Thin, Unit, Word,
 )  # fmt: skip
+_SHORT_CELL = 160
 _TEXT_SIZES = ((6, "9"), (8, "8.5"), (10, "8"), (12, "7.5"), (10_000, "7"))
 _LONG_WORD = re.compile(r"\S{40}")
 
@@ -193,24 +194,33 @@ def _filters() -> dict[str, Any]:
         "checks_text": _checks_text,
         "length_class": _length_class,
         "fails": fails,
+        "short_cells": _short_cells,
         "heading": _heading,
         "text_size": _text_size,
         "covered_text": lambda item: f"{item.check} ({item.clause})" if item.clause else item.check,
     }
 
 
-def _heading(math: Math) -> tuple[Math | None, str]:
-    """Part a heading into its symbol and the words after it, which may wrap."""
+def _heading(math: Math) -> tuple[Math | None, str, str]:
+    """Part a heading into its symbol, the words after it, which may wrap, and the unit."""
+    symbol: Math | None = math
+    words = ""
     if isinstance(math, Word):
-        return None, math.text
-    if isinstance(math, Row) and isinstance(math.items[-1], Word):
-        return row(math.items[:-1]), math.items[-1].text
-    return math, ""
+        symbol, words = None, math.text
+    elif isinstance(math, Row) and isinstance(math.items[-1], Word):
+        symbol, words = row(math.items[:-1]), math.items[-1].text
+    first, comma, unit = words.rpartition(", ")
+    return (symbol, first, unit) if comma else (symbol, words, "")
 
 
 def _text_size(columns: int) -> str:
     """Return the text size of a table, in points: the more columns, the smaller."""
     return next(size for most, size in _TEXT_SIZES if columns <= most)
+
+
+def _short_cells(table: PrintedTable) -> bool:
+    """Tell whether no cell of a table can grow longer than a page, however narrow it is set."""
+    return all(len(cell) <= _SHORT_CELL for line in table.rows for cell in line)
 
 
 def _length_class(title: str) -> str:
