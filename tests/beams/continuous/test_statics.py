@@ -1,0 +1,145 @@
+"""The analysis on the sheet: what is recorded equals the solver and sympy, and closes by hand."""
+
+from __future__ import annotations
+
+from typing import Any
+
+import pytest
+import sympy
+from hypothesis import given, settings
+from hypothesis import strategies as st
+from sympy.physics.continuum_mechanics.beam import Beam as SympyBeam
+
+from lineproof.beams.continuous import case_forces
+from lineproof.beams.continuous.flexure import faces_of, sagging_spans
+from lineproof.beams.continuous.forces import Demand
+from lineproof.beams.continuous.model import Model
+from lineproof.beams.steps import Steps
+from lineproof.record.recompute import recompute
+
+from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
+from .flow import MIXED, analysed, close_anyway, record_so_far
+
+EQUAL = 1e-9
+"""Recorded lines and the solver are the same statics in two orders of summing."""
+
+
+def _recorded(model: Model, demand: Demand, near: Any, key: str) -> tuple[float, float]:
+    with model.sheet.part(key, "Forces of one case"):
+        steps = Steps(model.sheet, {})
+        x = None
+        if abs(demand.V) > 1:
+            span = model.lengths[demand.span - 1].value
+            at = demand.x if near == "left" else span - demand.x
+            x = model.sheet.given("x_f", f"{at / 1000!r} m")
+        case_forces.record_forces(steps, model, demand, near, x=x)
+        return steps.place["M_f"].value, steps.place["V_f"].value
+
+
+def _all_demands(model: Model) -> list[tuple[Demand, Any, str]]:
+    made: list[tuple[Demand, Any, str]] = []
+    for span in sagging_spans(model):
+        demand = model.forces.sag(span)
+        made.append((demand, "left", f"s{span}-left"))
+        made.append((demand, "right", f"s{span}-right"))
+    return made + [
+        (model.forces.hog(face.support, face.side), face.near, face.key) for face in faces_of(model)
+    ]
+
+
+@pytest.mark.parametrize("changes", [{}, MIXED], ids=["three spans", "mixed"])
+def test_recorded_forces_are_those_of_the_solver(changes: dict[str, Any]) -> None:
+    model = analysed(**changes).model
+    for demand, near, key in _all_demands(model):
+        M_f, V_f = _recorded(model, demand, near, key)
+        assert M_f == pytest.approx(abs(demand.M), rel=EQUAL), key
+        assert V_f == pytest.approx(abs(demand.V), rel=EQUAL, abs=1e-3), key
+
+
+@pytest.mark.parametrize("changes", [{}, MIXED], ids=["three spans", "mixed"])
+def test_record_reads_back_recomputes_and_is_followed_by_hand(changes: dict[str, Any]) -> None:
+    beam = analysed(**changes)
+    for demand, near, key in _all_demands(beam.model):
+        _recorded(beam.model, demand, near, key)
+    record = record_so_far(beam)
+    assert recompute(record) == []
+    assert list(faults(record.data)) == []
+
+
+def test_support_moments_against_sympy() -> None:
+    """Dead load on three spans: sympy's Beam, constant EI, solved for the reactions."""
+    record = record_so_far(analysed())
+    w, x = sympy.Float(record.entries["loads/w_D1"]["value"]), sympy.Symbol("x")
+    R = sympy.symbols("R1:5")
+    beam = SympyBeam(sympy.Rational("24.4"), 1, 1, x)
+    for force, at in zip(R, ("0", "7.6", "16.8", "24.4"), strict=True):
+        beam.apply_load(force, sympy.Rational(at), -1)
+        beam.bc_deflection.append((sympy.Rational(at), 0))
+    beam.apply_load(-w, 0, 0, end=sympy.Rational("24.4"))
+    beam.solve_for_reaction_loads(*R)
+    found = [float(beam.reaction_loads[force]) for force in R]
+    recorded = [record.entries[f"analysis/R_{j}D"]["value"] for j in range(1, 5)]
+    assert recorded == pytest.approx(found, rel=EQUAL)
+
+
+def test_three_equal_spans_of_the_tables() -> None:
+    """Three equal spans, load on all: -0.100 w l^2 at both supports (published tables; K2)."""
+    record = record_so_far(analysed(spans=["8 m"] * 3))
+    w = record.entries["loads/w_D1"]["value"]
+    for support in (2, 3):
+        moment = record.entries[f"analysis/M_{support}D"]["value"]
+        assert round(-moment / (w * 64), 3) == pytest.approx(0.100, abs=1e-12)
+
+
+def test_live_load_is_one_row_a_span() -> None:
+    """Rows of live load on single spans add to live load on all (superposition)."""
+    record = record_so_far(analysed())
+    moments = {i: e["value"] for i, e in record.entries.items() if i.startswith("analysis/M_")}
+    by_span = sum(moments[f"analysis/M_2L{k}"] for k in (1, 2, 3))
+    ratio = record.entries["loads/w_L1"]["value"] / record.entries["loads/w_D1"]["value"]
+    assert by_span == pytest.approx(ratio * moments["analysis/M_2D"], rel=EQUAL)
+
+
+@st.composite
+def _beams(draw: st.DrawFn) -> dict[str, Any]:
+    count = draw(st.integers(1, 4))
+    spans = [f"{draw(st.integers(45, 110)) / 10} m" for _ in range(count)]
+    kinds = ["column 400 mm", "girder 350 mm", "wall 300 mm", "wall 300 mm, fixed"]
+    supports = [draw(st.sampled_from(kinds)) for _ in range(count + 1)]
+    columns = {}
+    for number, support in enumerate(supports, start=1):
+        if support.startswith("column") and draw(st.booleans()):
+            columns[number] = ["400 mm x 400 mm x 3.5 m"]
+    if count > 1 and draw(st.booleans()):
+        spans[0], supports[0] = "1.8 m", "free"
+        columns.pop(1, None)
+    loads: list[dict[str, Any]] = []
+    for _ in range(draw(st.integers(0, 3))):
+        span = draw(st.integers(1, count))
+        at = draw(st.integers(3, 14)) / 10
+        kind = draw(st.sampled_from(["D", "L", "S"]))
+        if draw(st.booleans()):
+            loads.append({"type": kind, "span": span, "point": "25 kN", "at": f"{at} m"})
+        else:
+            loads.append(
+                {"type": kind, "span": span, "line": "4 kN/m", "from": "0.2 m", "to": f"{at} m"}
+            )
+    depths: Any = draw(st.sampled_from(["600 mm", None]))
+    depth = depths or [f"{draw(st.integers(50, 70)) * 10} mm" for _ in range(count)]
+    return {
+        "spans": spans, "supports": supports, "columns": columns or None, "loads": loads,
+        "h": depth,
+    }  # fmt: skip
+
+
+@settings(max_examples=40, deadline=None)
+@given(_beams())
+def test_any_beam_is_recorded_as_it_is_solved(changes: dict[str, Any]) -> None:
+    model = analysed(**changes).model
+    for demand, near, key in _all_demands(model):
+        M_f, V_f = _recorded(model, demand, near, key)
+        scale = max(abs(d.M) for d, _, _ in _all_demands(model))
+        assert M_f == pytest.approx(abs(demand.M), rel=EQUAL, abs=1e-9 * scale), key
+        assert V_f == pytest.approx(abs(demand.V), rel=EQUAL, abs=1e-2), key
+    record = close_anyway(model.sheet)
+    assert recompute(record) == []
