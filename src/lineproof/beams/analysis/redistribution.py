@@ -38,7 +38,7 @@ def redistribute(
     Raises :class:`UserError` with all faults. Deflections of the result are refused.
     """
     beam = solved.solution.beam
-    _check(beam, reductions, limits)
+    check_reductions(beam, reductions, limits)
     chosen = np.ones(len(solved.cases), dtype=bool)
     if only is not None:
         chosen = np.isin(np.arange(len(solved.cases)), sorted(only))
@@ -83,7 +83,10 @@ def _shifted(curves: Curves, left: Floats | None = None, right: Floats | None = 
     )  # fmt: skip
 
 
-def _check(beam: Beam, reductions: Mapping[int, float], limits: Mapping[int, float]) -> None:
+def check_reductions(
+    beam: Beam, reductions: Mapping[int, float], limits: Mapping[int, float]
+) -> None:
+    """Raise :class:`UserError` with every change of a support moment that cannot be made."""
     faults = FaultList()
     for support, percent in reductions.items():
         name = f"redistribution at support {support}"

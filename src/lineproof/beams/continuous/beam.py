@@ -9,6 +9,7 @@ from lineproof.beams import basics
 from lineproof.beams.continuous import flexure
 from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.bar_choice import Chosen, TopBars
+from lineproof.beams.continuous.coefficients import COEFFICIENTS, record_coefficients
 from lineproof.beams.continuous.cover import record_cover
 from lineproof.beams.continuous.geometry import record_spans
 from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
@@ -55,8 +56,10 @@ class ContinuousBeam:
         record_spans(self.sheet, self.inputs)
 
     def analysis(self) -> None:
-        """Record the support moments and reactions by load type."""
+        """Record support moments and reactions by load type, and the coefficients beside."""
         record_analysis(self.model)
+        if self.model.spans > 1:
+            record_coefficients(self.model)
 
     def flexure(self) -> None:
         """Record bars and resistance at every span and both faces of every support."""
@@ -128,6 +131,7 @@ def continuous_beam(
     minimum_rule: str = "10.5.1.2",
     carries: str = "roof or floor with parts attached that deflection damages",
     sustained: QuantityInput | None = None,
+    redistribution: Mapping[int, float] | None = None,
     web_openings: str = "none",
 ) -> ContinuousBeam:
     """Start a beam of one or more spans: check all inputs, record them and the materials.
@@ -167,5 +171,7 @@ def calls_of(inputs: ContinuousInputs) -> dict[str, str]:
     calls[LOADS] = "beam.loads()"
     calls |= {span_key(k): "beam.spans()" for k in range(1, count + 1)}
     calls[ANALYSIS] = "beam.analysis()"
+    if count > 1:
+        calls[COEFFICIENTS] = "beam.analysis()"
     calls[basics.COVER] = "beam.flexure()"
     return calls | dict.fromkeys(flexure.part_keys(inputs), "beam.flexure()")

@@ -12,7 +12,7 @@ from dataclasses import dataclass
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.groups import Group, groups_of, moment_name, named
-from lineproof.beams.continuous.model import ANALYSIS, Model, SingleLoad
+from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model, SingleLoad
 from lineproof.beams.continuous.symbols import code, stated
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
@@ -124,9 +124,11 @@ class _Lines:
         if not terms:
             return False
         support = self.case.span if end == "left" else self.case.span + 1
-        self._line(
-            f"{symbol} = {' + '.join(terms)}", f"Moment at the axis of support {support}, this case"
-        )
+        total, what = " + ".join(terms), f"Moment at the axis of support {support}, this case"
+        if self.model.forces.reduced(support, self.demand.row):
+            self.names[f"p_{support}"] = self.model.sheet.entry(f"{GIVEN}/p_{support}")
+            total, what = f"(1 - p_{support}/100)*({total})", f"{what}, redistributed"
+        self._line(f"{symbol} = {total}", what)
         return True
 
     def _at(self, load: SingleLoad) -> str:

@@ -313,6 +313,7 @@ def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict
     M_r = resistance(steps, "rectangular")
     record_yield(steps, pair)
     steps.check(flexure.STRENGTH)
+    _record_redistribution(steps, model, face)
     record_proof(steps, ("rectangle", "one layer"), M_r)
     minimum_of(
         steps, inputs.minimum_rule, minimum.BY_CRACKING_TOP, TENSION_WIDTHS[inputs.shape],
@@ -325,6 +326,14 @@ def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict
     _take(steps, ("M_r", "A_s", "d", "n_o", "A_b"))
     made = sheet.part_entries
     return {name: made[name] for name in ("M_r", "A_s", "d", "n_o", "A_b") if name in made}
+
+
+def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:
+    """Record that the section allows the change of its support's moment, if there is one."""
+    if face.support in model.inputs.redistribution:
+        steps.line(analysis.LARGEST_CHANGE)
+        p_rd = model.sheet.entry(f"{GIVEN}/p_{face.support}")
+        steps.check(analysis.CHANGE_ALLOWED, p_rd=p_rd)
 
 
 def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> None:

@@ -25,6 +25,7 @@ from lineproof.beams.analysis.arrangements import (
 from lineproof.beams.analysis.curves import Floats, Side
 from lineproof.beams.analysis.envelope import CaseSolution
 from lineproof.beams.analysis.model import Beam, Load
+from lineproof.beams.analysis.redistribution import MOST, redistribute
 from lineproof.beams.analysis.solve import Row, Solution, solve
 
 End = Literal["left", "right"]
@@ -53,6 +54,8 @@ class Forces:
     """A solved beam with all its load cases.
 
     ``solution`` has one row a load type and span, ``factors`` (cases, rows) makes the cases.
+    ``reductions`` are support numbers with the part [%] by which every case's moment there is
+    reduced (9.2.4).
     """
 
     beam: Beam
@@ -60,6 +63,7 @@ class Forces:
     solution: Solution
     cases: tuple[LoadCase, ...]
     factors: Floats
+    reductions: tuple[tuple[int, float], ...] = ()
 
     @classmethod
     def of(
@@ -68,8 +72,12 @@ class Forces:
         loads: Iterable[Load],
         combinations: Sequence[Combination] | None = None,
         arrangements: Sequence[Arrangement] | None = None,
+        reductions: Mapping[int, float] | None = None,
     ) -> Forces:
         """Solve a beam for its loads; by default all strength combinations and arrangements.
+
+        ``reductions`` are made within the most that 9.2.4 allows any section; whether a section
+        allows it is a check of its own.
 
         Raises :class:`UserError` with every fault of beam and loads.
         """
@@ -81,12 +89,17 @@ class Forces:
         if arrangements is None:
             arrangements = standard_arrangements(len(beam.spans), beyond=True)
         made: Cases = cases_of(solution.rows, combinations, arrangements)
-        return cls(beam, kept, solution, made.names, made.factors)
+        chosen = tuple((reductions or {}).items())
+        return cls(beam, kept, solution, made.names, made.factors, chosen)
 
     @cached_property
     def solved(self) -> CaseSolution:
         """The solution of every case."""
-        return CaseSolution(self.solution.combined(self.factors), self.cases)
+        elastic = CaseSolution(self.solution.combined(self.factors), self.cases)
+        if not self.reductions:
+            return elastic
+        reductions = dict(self.reductions)
+        return redistribute(elastic, reductions, dict.fromkeys(reductions, MOST))
 
     def pairs(self, span: int, x: float, side: Side = "right") -> tuple[Floats, Floats]:
         """Return M [N.mm] and V [N] of every case at one station (cases,), concurrent."""
@@ -139,6 +152,15 @@ class Forces:
         if self.beam.supports[support - 1].kind == "free":
             return False
         return 1 <= (support - 1 if side == "left" else support) <= len(self.beam.spans)
+
+    def reduced(self, support: int, row: int) -> bool:
+        """Tell whether a case's moment at a support is reduced: where the top is in tension."""
+        if support not in dict(self.reductions):
+            return False
+        spans = self.solution.combined(self.factors[row : row + 1]).spans
+        beside = [spans[support - 2].end_moment] if support > 1 else []
+        beside += [spans[support - 1].M0] if support <= len(spans) else []
+        return any(float(M[0]) < 0 for M in beside)
 
     def factors_of(self, row: int) -> Mapping[Row, float]:
         """Return the factors of a case on the rows of the solution that act in it."""

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from lineproof.beams.analysis.model import Beam, Span, Support
+from lineproof.beams.analysis.redistribution import MOST, check_reductions
 from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
 from lineproof.beams.continuous.typed_beam import (
     TypedLoad,
@@ -87,6 +88,7 @@ class ContinuousInputs:
     minimum_rule: str
     carries: str
     sustained: Typed | None
+    redistribution: Mapping[int, float]
 
     @property
     def slab(self) -> bool:
@@ -136,6 +138,7 @@ def read_inputs(
             "depths": take("h", read_depths, count),
             "supports": take("supports", read_supports, given["columns"], count),
             "loads": take("loads", read_loads, spans),
+            "redistribution": take("redistribution", _read_redistribution) or {},
             "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
             "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),
         }
@@ -145,6 +148,29 @@ def read_inputs(
         _check_proportions(fields, reader.faults)
     reader.faults.raise_if_any()
     return ContinuousInputs(**fields), pair
+
+
+def _read_redistribution(name: str, given: object) -> dict[int, float]:
+    """Read by how many per cent the moments of supports are changed, by number of the support."""
+    if given is None:
+        return {}
+    if not isinstance(given, Mapping):
+        raise UserError(
+            f"{name}: {echo(given)} is not understood; write {{2: 15, 3: 15}} (per cent)"
+        )
+    faults = FaultList()
+    made: dict[int, float] = {}
+    for support, percent in given.items():
+        number = isinstance(percent, int | float) and not isinstance(percent, bool)
+        if not isinstance(support, int) or not number:
+            faults.add(
+                f"{name}: {echo(support)}: {echo(percent)}; write the number of the support and the "
+                "per cent: {2: 15}"
+            )
+        else:
+            made[support] = float(percent)
+    faults.raise_if_any()
+    return made
 
 
 def _read_bar_list(
@@ -198,7 +224,9 @@ def _check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Fau
 def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
     """Refuse beams that cannot stand, slabs thicker than the beam, and deep beams."""
     try:
-        _stand_in(fields)
+        beam = _stand_in(fields)
+        changes = fields["redistribution"]
+        check_reductions(beam, changes, dict.fromkeys(changes, MOST))
     except UserError as error:
         faults.take(error)
     supports: tuple[TypedSupport, ...] = fields["supports"]

@@ -35,6 +35,8 @@ def beam_symbols(inputs: ContinuousInputs) -> Iterator[Symbol]:
             )
     for j in range(1, count + 2):
         yield numbered(f"b_s{j}", "b", f"s{j}", f"width of support {j} along the beam")
+    for j in inputs.redistribution:
+        yield numbered(f"p_{j}", "p", str(j), f"change of the moments at support {j}, per cent")
     for j, support in enumerate(inputs.supports, start=1):
         yield from _column_symbols(j, len(support.columns))
     yield from _load_symbols(inputs)
@@ -105,6 +107,8 @@ def record_given(sheet: Sheet, inputs: ContinuousInputs) -> None:
         sheet.given("gamma_c", inputs.gamma_c)
         sheet.given("c_c", inputs.cover)
         sheet.given("a_max", inputs.aggregate)
+        for j, percent in inputs.redistribution.items():
+            sheet.given(f"p_{j}", f"{percent:g}", clause="9.2.4")
         sheet.note("supports", _supports_text(inputs), title="Supports, from left to right")
         sheet.note("choices", _choices_text(inputs), title="Choices")
 

@@ -138,7 +138,7 @@ def model_of(sheet: Sheet, inputs: ContinuousInputs) -> Model:
         *(UniformLoad(kind, k, entry.value) for (kind, k), entry in uniform.items()),
         *(load.load for load in single),
     )
-    forces = _forces(Beam(spans, supports), acting)
+    forces = _forces(Beam(spans, supports), acting, tuple(inputs.redistribution.items()))
     return Model(sheet, inputs, lengths, uniform, single, inertias, stiffnesses, forces)
 
 
@@ -177,8 +177,10 @@ def whole_span_loads(inputs: ContinuousInputs) -> list[TypedLoad]:
 
 
 @lru_cache(maxsize=32)
-def _forces(beam: Beam, loads: tuple[Load, ...]) -> Forces:
-    return Forces.of(beam, loads)
+def _forces(
+    beam: Beam, loads: tuple[Load, ...], reductions: tuple[tuple[int, float], ...]
+) -> Forces:
+    return Forces.of(beam, loads, reductions=dict(reductions))
 
 
 def outline_of(sheet: Sheet, inputs: ContinuousInputs) -> BeamOutline:

@@ -26,6 +26,7 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"h_\d+", "mm"),
         (r"b_s\d+", "mm"),
         (r"I_\d+", "mm4"),
+        (r"p_\d+", ""),
         (r"K_\d+", "mm3"),
         (r"w_(D|L|Lst|S)\d+", "kN/m"),
         (r"w_[xy]\d+", "kN/m"),
