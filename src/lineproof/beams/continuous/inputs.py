@@ -164,8 +164,8 @@ def _read_redistribution(name: str, given: object) -> dict[int, float]:
         number = isinstance(percent, int | float) and not isinstance(percent, bool)
         if not isinstance(support, int) or not number:
             faults.add(
-                f"{name}: {echo(support)}: {echo(percent)}; write the number of the support and the "
-                "per cent: {2: 15}"
+                f"{name}: {echo(support)}: {echo(percent)}; write number of the support and per "
+                "cent: {2: 15}"
             )
         else:
             made[support] = float(percent)
