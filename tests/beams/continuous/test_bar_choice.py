@@ -1,0 +1,150 @@
+"""Bars chosen alike over the beam: no choice within the same rules is better by the stated order.
+
+The brute force below records every layout in full on a sheet of its own and asks whether each
+recorded check holds; it shares with the choice neither its shortcuts nor its numbers.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from itertools import product
+from typing import Any
+
+import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
+
+from lineproof import beams
+from lineproof.beams.bars import BarLayer, in_line
+from lineproof.beams.continuous import flexure
+from lineproof.beams.continuous.bar_choice import TopBars
+from lineproof.beams.continuous.flexure import faces_of, hogging, sagging_spans
+from lineproof.errors import UserError
+from lineproof.record.entry import CHECK
+from lineproof.sheet import Trial
+
+from .flow import analysed
+
+SIZES = {"15M": 200, "20M": 300, "25M": 500, "30M": 700, "35M": 1000}
+"""Areas of the bars tried [mm2] (CSA G30.18)."""
+MOST = 7
+
+
+def _holds(beam: beams.ContinuousBeam, record: Any, *keys: str) -> bool:
+    trial = Trial(beam.sheet)
+    model = type(beam.model)(**(vars(beam.model) | {"sheet": trial}))
+    try:
+        record(model)
+    except UserError:
+        return False
+    parts = [part for part in trial.parts if part.key in keys]
+    checks = [e for part in parts for e in part.entries.values() if e.kind == CHECK]
+    assert checks
+    return all(bool(check) for check in checks)
+
+
+def _bottom_layouts(size: str) -> Iterator[tuple[BarLayer, ...]]:
+    for n in range(2, MOST + 1):
+        yield (BarLayer(n, size),)
+        yield from (
+            (BarLayer(n, size), BarLayer(m, size)) for m in range(2, n + 1) if in_line(n, m)
+        )
+
+
+def _best_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int] | None:
+    """Return the least key over all sizes, one size for the whole beam."""
+    model, keys = beam.model, []
+    for size, area in SIZES.items():
+        per_span = []
+        for span in sagging_spans(model):
+            length = model.lengths[span - 1].value
+            able = [
+                (len(layers) - 1, area * length * sum(x.number for x in layers),
+                 sum(x.number for x in layers))
+                for layers in _bottom_layouts(size)
+                if _holds(
+                    beam, lambda m, s=span, b=layers: flexure.record_sag(m, s, b, beam.pair),
+                    f"sag-{span}",
+                )
+            ]  # fmt: skip
+            per_span.append(min(able, default=None))
+        if None not in per_span:
+            columns = zip(*[row for row in per_span if row is not None], strict=True)
+            keys.append(tuple(sum(column) for column in columns))
+    return min(keys, default=None)  # type: ignore[return-value]  # three numbers
+
+
+def _key_of_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int]:
+    model = beam.model
+    second, mass, number = 0, 0.0, 0
+    for span, chosen in flexure.choose_bottom(model, beam.pair).items():
+        layers = chosen.bars
+        assert isinstance(layers, tuple)
+        second += len(layers) - 1
+        count = sum(layer.number for layer in layers)
+        mass += SIZES[layers[0].size] * count * model.lengths[span - 1].value
+        number += count
+    return second, mass, number
+
+
+@st.composite
+def _random_beams(draw: st.DrawFn) -> dict[str, Any]:
+    count = draw(st.integers(1, 2))
+    return {
+        "spans": [f"{draw(st.integers(55, 95)) / 10} m" for _ in range(count)],
+        "supports": ["column 400 mm"] * (count + 1),
+        "h": f"{draw(st.integers(50, 70)) * 10} mm",
+        "b_w": f"{draw(st.integers(28, 42)) * 10} mm",
+        "superimposed": f"{draw(st.integers(5, 40)) / 10} kPa",
+    }
+
+
+@settings(max_examples=6, deadline=None)
+@given(_random_beams())
+def test_no_bottom_bars_are_better(changes: dict[str, Any]) -> None:
+    beam = analysed(**changes)
+    best = _best_bottom(beam)
+    if best is None:
+        with pytest.raises(UserError, match="bottom_bars"):
+            flexure.choose_bottom(beam.model, beam.pair)
+        return
+    second, mass, number = _key_of_bottom(beam)
+    assert (second, round(mass), number) == (best[0], round(best[1]), best[2])
+
+
+def _best_top(beam: beams.ContinuousBeam, support: int) -> dict[str, float]:
+    """Return the least area of top bars of each size that passes at both faces."""
+    model = beam.model
+    keys = [f.key for f in faces_of(model) if f.support == support and hogging(model, f) > 0]
+    found: dict[str, float] = {}
+    for size, area in SIZES.items():
+        for n, beside in product(range(2, MOST + 1), range(6)):
+            top = TopBars(BarLayer(n, size), beside, 2)
+            total = area * (n + 2 * beside)
+            if total < found.get(size, float("inf")) and _holds(
+                beam, lambda m, t=top: flexure.record_hog(m, support, t, beam.pair), *keys
+            ):
+                found[size] = total
+    return found
+
+
+def test_no_top_bars_are_better() -> None:
+    """Three spans: one size for all supports, least mass (a third of each span beside)."""
+    beam = analysed()
+    model = beam.model
+    chosen = flexure.choose_top(model, beam.pair)
+    lengths = {1: 7.6, 2: 7.6 + 9.2, 3: 9.2 + 7.6, 4: 7.6}
+    best = {support: _best_top(beam, support) for support in chosen}
+    totals = {
+        size: sum(best[j][size] * lengths[j] for j in chosen)
+        for size in SIZES
+        if all(size in best[j] for j in chosen)
+    }
+    mine = 0.0
+    for support, made in chosen.items():
+        assert isinstance(made.bars, TopBars)
+        mine += made.bars.area * lengths[support]
+    assert mine == pytest.approx(min(totals.values()))
+    assert (
+        len({made.bars.web.size for made in chosen.values() if isinstance(made.bars, TopBars)}) == 1
+    )
