@@ -2,11 +2,17 @@
 
 from __future__ import annotations
 
+import random
+from dataclasses import replace
+
 from lineproof.beams.continuous.layout import (
     BarRun,
     BeamOutline,
     BuiltSupport,
+    Carrier,
     Detailing,
+    Face,
+    Hook,
     StirrupZone,
 )
 
@@ -90,3 +96,36 @@ def _zones(beam: BeamOutline, *, closed: bool, legs: int) -> tuple[StirrupZone, 
             StirrupZone(span, right, last, near + 1, 125.0, "10M", legs, closed),
         ]
     return tuple(zones)
+
+
+def random_beam(seed: int, most_spans: int) -> tuple[BeamOutline, Detailing]:
+    """Return a beam of any spans, depths and supports, with bars and hooks anywhere."""
+    pick = random.Random(seed)  # noqa: S311 - test data
+    count = pick.randint(1, most_spans)
+    lengths = tuple(float(pick.randrange(1500, 14000, 50)) for _ in range(count))
+    depths = tuple(float(pick.choice((400, 450, 600, 750, 900))) for _ in range(count))
+
+    def support() -> BuiltSupport:
+        width = float(pick.choice((0, 200, 300, 450, 600, 900)))
+        carriers: tuple[Carrier, ...] = ("column", "girder", "wall")
+        return BuiltSupport(width, "simple", pick.choice(carriers))
+
+    beam = outline(lengths, depths=depths)
+    ends = [pick.choice((FREE_END, support())) if count > 1 else support() for _ in range(2)]
+    beam = replace(beam, supports=(ends[0], *[support() for _ in range(count - 1)], ends[1]))
+    given = detailing(beam, closed=pick.random() < 0.5, legs=pick.choice((2, 3, 4)))
+    runs = [run for run in given.bars if run.end - run.start > 600.0]
+    for _ in range(pick.randint(0, 6)):
+        start = pick.uniform(beam.ends[0] + 40.0, beam.ends[1] - 1200.0)
+        end = min(beam.ends[1] - 40.0, start + pick.uniform(800.0, 12000.0))
+        face: Face = pick.choice(("bottom", "top"))
+        hooks: tuple[Hook, ...] = ("", "", "90", "180")
+        size = pick.choice(("15M", "20M", "25M", "30M"))
+        runs.append(
+            BarRun(
+                face, pick.choice((1, 2)), pick.randint(1, 4), size, start, end,
+                hook_start=pick.choice(hooks), hook_end=pick.choice(hooks),
+            )
+        )  # fmt: skip
+    zones = tuple(zone for zone in given.stirrups if zone.end > zone.start)
+    return beam, Detailing(tuple(runs), zones)

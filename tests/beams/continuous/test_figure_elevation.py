@@ -13,7 +13,7 @@ from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, St
 from lineproof.beams.continuous.schedule import schedule
 from lineproof.drawing import OUTLINE, Dimension, Figure, Line, Text
 
-from .by_hand import COLUMN, FREE_END, GIRDER, detailing, outline
+from .by_hand import COLUMN, FREE_END, GIRDER, detailing, outline, random_beam
 from .print_checks import assert_readable, plain, words_of
 
 SOLID = frozenset({"concrete", "bars", "stirrups", "dimensions"})
@@ -73,6 +73,15 @@ def test_short_and_long_spans(lengths: tuple[float, ...]) -> None:
     """Spans of 800 mm to 30 m."""
     beam = outline(lengths)
     for figure in elevation_figures(beam, marked(beam)):
+        assert_readable(figure, SOLID)
+
+
+@pytest.mark.parametrize("seed", range(24))
+def test_any_beam_is_readable(seed: int) -> None:
+    """Supports without width, walls, free ends, bars and hooks anywhere, up to six spans."""
+    beam, given = random_beam(seed, 6)
+    made = schedule(beam, given).detailing
+    for figure in elevation_figures(beam, made):
         assert_readable(figure, SOLID)
 
 

@@ -47,7 +47,7 @@ BEND_NOTE = (
     "outside; a 90° hook of a bar has a tail of 12 bar diameters beyond the bend, a 180° hook "
     "4 diameters, at least 60 mm; hooks of stirrups 6 diameters, at least 60 mm. Cut lengths are "
     "along the centre line. Tails, hooks and cut lengths are rounded up to 10 mm. Shape codes by "
-    "ISO 3766; a shape without a code is made as drawn."
+    "ISO 3766 (from memory); a shape without a code is bent as drawn."
 )
 TAIL_90, TAIL_180, TAIL_STIRRUP, LEAST_TAIL = 12.0, 4.0, 6.0, 60.0
 Form = Literal["bar", "open stirrup", "closed stirrup", "single leg", "closed single leg"]

@@ -126,7 +126,7 @@ def _ticks(data: Along) -> tuple[float, ...]:
 def _band(axes: Axes, marks: Sequence[Mark]) -> _Band:
     widths = [max(text_width(line, VALUE) for line in mark.lines) for mark in marks]
     wanted = [axes.at(mark.x, 0.0)[0] for mark in marks]
-    places = in_rows(widths, wanted, LEFT - 8.0, WIDTH - 0.5) if marks else []
+    places = in_rows(widths, wanted, LEFT - 1.0, WIDTH - 0.5) if marks else []
     lines = max((len(mark.lines) for mark in marks), default=0)
     row = lines * LINE + 1.2
     rows = 1 + max((number for number, _ in places), default=-1)

@@ -5,9 +5,9 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from lineproof.beams.continuous.figure_elevation_bars import (
-    PITCH,
     bars_in_place,
     draw_rows,
+    levels,
     pulled_bars,
 )
 from lineproof.beams.continuous.figure_elevation_concrete import STUB, axis_lines, concrete
@@ -15,9 +15,11 @@ from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, p
 from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
 from lineproof.beams.continuous.layout import BeamOutline, Detailing
 from lineproof.drawing import LIGHT, OUTLINE, Arrow, Dimension, Figure, Line, Shape, Text, words
+from lineproof.drawing.metrics import text_width
+from lineproof.drawing.paper import FIT_MARGIN
 
-TOP_ROW = 9.0
-"""Height of the first row of top bars over the beam, mm on paper."""
+TOP_ROW = 5.0
+"""Where the rows of top bars begin over the beam, mm on paper."""
 BUBBLE = 2.4
 NOTE = 2.6
 Section = tuple[str, float]
@@ -55,19 +57,19 @@ def elevation_figure(
     top = [run for run in detailing.bars if run.face == "top" and run.place != "side face"]
     low = [run for run in detailing.bars if run not in top]
     rows_up, rows_down = pulled_bars(seen, top, grade), pulled_bars(seen, low, grade)
-    ceiling = TOP_ROW + len(rows_up) * PITCH
+    tops, ceiling = levels(rows_up, TOP_ROW, 1)
     zones, zone_height = zone_block(seen, detailing.stirrups, -seen.deepest * seen.scale - STUB)
-    first_low = -seen.deepest * seen.scale - STUB - zone_height - 5.5
-    floor = first_low - len(rows_down) * PITCH
+    first_low = -seen.deepest * seen.scale - STUB - zone_height - 2.0
+    lows, floor = levels(rows_down, first_low, -1)
     shapes = [
         *axis_lines(seen, ceiling, floor - 11.0, BUBBLE),
         *concrete(seen),
         *stirrup_lines(seen, detailing.stirrups),
         *bars_in_place(seen, detailing.bars, outline.cover),
         *_section_marks(seen, sections),
-        *draw_rows(seen, rows_up, TOP_ROW, 1),
+        *draw_rows(seen, rows_up, tops),
         *zones,
-        *draw_rows(seen, rows_down, first_low, -1),
+        *draw_rows(seen, rows_down, lows),
         *_spans(seen, floor),
         *_notes(seen, detailing, floor - 16.5),
     ]
@@ -107,17 +109,19 @@ def _section_marks(seen: View, sections: Sequence[Section]) -> list[Shape]:
 
 
 def _spans(seen: View, floor: float) -> list[Shape]:
-    """Dimension the clear lengths, then the spans between axes."""
+    """Dimension the clear lengths where they fit, then the spans between axes."""
     outline = seen.outline
+    y = seen.mm(floor)
     shapes: list[Shape] = []
     for span in seen.spans:
         start, end = outline.faces(span)
         left, right = outline.axes[span - 1 : span + 1]
-        y = seen.mm(floor)
-        if (start, end) != (left, right):
-            shapes.append(
-                Dimension((start, y), (end, y), "horizontal", -4.0, words("clear"), size=2.3)
-            )
+        for symbol in (words("clear"), ()):
+            clear = Dimension((start, y), (end, y), "horizontal", -4.0, symbol, size=2.3)
+            fits = text_width(clear.runs, 2.3) + FIT_MARGIN <= clear.measured * seen.scale
+            if fits and (start, end) != (left, right):
+                shapes.append(clear)
+                break
         shapes.append(Dimension((left, y), (right, y), "horizontal", -9.5))
     return shapes
 

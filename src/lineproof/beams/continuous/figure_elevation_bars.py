@@ -7,8 +7,13 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from typing import Literal
 
+from lineproof.beams.continuous.figure_elevation_cuts import (
+    LEAST_SHOWN,
+    NUMBER,
+    Cut,
+    cut_lengths,
+)
 from lineproof.beams.continuous.figure_elevation_view import View
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.schedule import shape_of
@@ -25,40 +30,31 @@ from lineproof.drawing import (
     Text,
 )
 from lineproof.drawing.metrics import text_width
-from lineproof.drawing.paper import FIT_MARGIN
 
-LABEL, NUMBER = 2.5, 2.3
-"""Text sizes of marks and of cut-off lengths."""
-PITCH = 8.8
-OVER_BAR, DIMENSION = 1.25, -3.5
+LABEL = 2.5
+"""Text size of marks."""
+OVER_BAR, OVER_HOOK = 1.25, 3.6
+UNDER_BAR, UNDER_HOOK = 3.5, 5.3
+"""Heights of labels over and of dimensions under a bar, without and with a hook in their way."""
+LABEL_TOP, ROW_GAP = 1.8, 2.2
 HOOK, ROUND = 2.4, 0.8
 APART = 1.6
-LEAST_SHOWN = 1.0
-
-
-@dataclass(frozen=True, slots=True)
-class Cut:
-    """A cut-off length: between a support axis and an end of the bar, and where its text goes."""
-
-    axis: float
-    end: float
-    outward: bool
-
-    @property
-    def length(self) -> float:
-        """Distance of the end of the bar from the axis [mm]."""
-        return abs(self.end - self.axis)
 
 
 @dataclass(frozen=True, slots=True)
 class Pulled:
-    """One run as drawn: its visible part, its label, its cut-off lengths, what it occupies."""
+    """One run as drawn: its visible part, its label, its cut-off lengths, what it occupies.
+
+    ``rise`` and ``drop`` are the heights of label and dimensions over and under the bar.
+    """
 
     run: BarRun
     start: float
     end: float
     label: Runs
     middle: float
+    rise: float
+    drop: float
     cuts: tuple[Cut, ...]
     reach: tuple[float, float]
 
@@ -88,14 +84,28 @@ def _fits(row: Sequence[Pulled], new: Pulled) -> bool:
 def _pulled(view: View, run: BarRun, grade: str) -> Pulled:
     start, end = max(run.start, view.low), min(run.end, view.high)
     label = _label(run, grade)
-    left, right = view.paper(start), view.paper(end)
-    middle = _label_place(view, run, text_width(label, LABEL), (left, right))
-    cuts = _cuts(view, run)
     half = text_width(label, LABEL) / 2
+    left, right = view.paper(start), view.paper(end)
+    middle = min(max((left + right) / 2, half + 1.0), view.width - half - 1.0)
+    over_end = middle - half < left + 1.2 or middle + half > right - 1.2
+    cut_off = start > run.start or end < run.end
+    hooked = bool(run.hook_start or run.hook_end)
+    in_way = over_end and (cut_off or (hooked and run.face == "bottom"))
+    cuts = cut_lengths(view, run)
     ends = [left, right, middle - half, middle + half]
     for cut in cuts:
-        ends.extend(_cut_reach(view, run, cut))
-    return Pulled(run, start, end, label, middle, cuts, (min(ends), max(ends)))
+        ends.extend(cut.reach(view))
+    return Pulled(
+        run,
+        start,
+        end,
+        label,
+        middle,
+        OVER_HOOK if in_way else OVER_BAR,
+        UNDER_HOOK if hooked and run.face == "top" else UNDER_BAR,
+        cuts,
+        (min(ends), max(ends)),
+    )
 
 
 def _label(run: BarRun, grade: str) -> Runs:
@@ -105,65 +115,34 @@ def _label(run: BarRun, grade: str) -> Runs:
     return ((run.mark, "bold"), (text, "roman"))
 
 
-def _label_place(view: View, run: BarRun, width: float, bar: tuple[float, float]) -> float:
-    """Middle of the label: over the bar, clear of an upward hook, inside the paper."""
-    left, right = bar
-    middle = (left + right) / 2
-    room = width / 2 + 1.0
-    if run.face == "bottom" and run.hook_start and middle - room < left:
-        middle = left + room
-    elif run.face == "bottom" and run.hook_end and middle + room > right:
-        middle = right - room
-    return min(max(middle, room), view.width - room)
+def height_of(row: Sequence[Pulled]) -> tuple[float, float]:
+    """Return how far a row reaches over and under its bars, mm on paper."""
+    up = max(bar.rise for bar in row) + LABEL_TOP
+    return up, max(bar.drop for bar in row) + 1.0
 
 
-def _cuts(view: View, run: BarRun) -> tuple[Cut, ...]:
-    """Cut-off lengths from the nearest axes; at a hook beside a longer one it is left out."""
-    axes = view.outline.axes
-    ends = [
-        (at, hook, min(axes, key=lambda axis: abs(axis - at)))
-        for at, hook in ((run.start, run.hook_start), (run.end, run.hook_end))
-        if view.low <= at <= view.high
+def levels(rows: Sequence[Sequence[Pulled]], first: float, way: int) -> tuple[list[float], float]:
+    """Return the height of the bars of each row, going up or down from ``first``, and the end."""
+    at = first
+    heights = []
+    for row in rows:
+        up, down = height_of(row)
+        near, far = (down, up) if way > 0 else (up, down)
+        heights.append(at + way * near)
+        at += way * (near + far + ROW_GAP)
+    return heights, at
+
+
+def draw_rows(
+    view: View, rows: Sequence[Sequence[Pulled]], heights: Sequence[float]
+) -> list[Shape]:
+    """Draw the rows at their heights."""
+    return [
+        shape
+        for row, height in zip(rows, heights, strict=True)
+        for bar in row
+        for shape in _draw(view, bar, height)
     ]
-    same = len(ends) > 1 and ends[0][2] == ends[1][2]
-    cuts = []
-    for at, hook, axis in ends:
-        cut = Cut(axis, at, outward=same)
-        crowded = same and bool(hook) and not _cut_fits(view, cut)
-        if cut.length >= LEAST_SHOWN and not crowded:
-            cuts.append(cut)
-    return tuple(cuts)
-
-
-def _cut_width(cut: Cut) -> float:
-    return text_width(((f"{cut.length:.0f}", "roman"),), NUMBER) + FIT_MARGIN
-
-
-def _cut_fits(view: View, cut: Cut) -> bool:
-    return _cut_width(cut) <= cut.length * view.scale
-
-
-def _outside(run: BarRun, cut: Cut) -> Literal["start", "end"]:
-    """Side of the dimension at which a text stands that does not fit into it."""
-    at_start = cut.end == run.start
-    return "start" if at_start == cut.outward else "end"
-
-
-def _cut_reach(view: View, run: BarRun, cut: Cut) -> tuple[float, float]:
-    low, high = sorted((view.paper(cut.axis), view.paper(cut.end)))
-    if _cut_fits(view, cut):
-        return low - 1.0, high + 1.0
-    more = _cut_width(cut) + 0.4
-    return (low - more, high) if _outside(run, cut) == "start" else (low, high + more)
-
-
-def draw_rows(view: View, rows: Sequence[Sequence[Pulled]], first: float, way: int) -> list[Shape]:
-    """Draw the rows from the height ``first`` on, upward (way 1) or downward (way -1)."""
-    shapes: list[Shape] = []
-    for number, row in enumerate(rows):
-        for bar in row:
-            shapes.extend(_draw(view, bar, first + way * number * PITCH))
-    return shapes
 
 
 def _draw(view: View, bar: Pulled, height: float) -> list[Shape]:
@@ -176,8 +155,8 @@ def _draw(view: View, bar: Pulled, height: float) -> list[Shape]:
             shapes.extend(_hook(view, hook, (at, y), inward, turn))
         else:
             shapes.append(_break(view, bar.start if inward > 0 else bar.end, y))
-    shapes += [_cut_dimension(run, cut, y) for cut in bar.cuts]
-    at_label = view.at(bar.middle, height + OVER_BAR)
+    shapes += [_cut_dimension(cut, y, bar.drop) for cut in bar.cuts]
+    at_label = view.at(bar.middle, height + bar.rise)
     shapes.append(Text(at_label, bar.label, "text", LABEL, valign="baseline"))
     return shapes
 
@@ -200,15 +179,15 @@ def _hook(
 
 def _break(view: View, x: float, y: float) -> Polyline:
     """Mark a bar that goes on beyond the drawing."""
-    w, h = view.mm(0.5), view.mm(1.0)
+    w, h = view.mm(0.45), view.mm(0.8)
     return Polyline(
         ((x - w, y - h), (x + w, y - h / 4), (x - w, y + h / 4), (x + w, y + h)), "bars", MEDIUM
     )
 
 
-def _cut_dimension(run: BarRun, cut: Cut, y: float) -> Dimension:
+def _cut_dimension(cut: Cut, y: float, drop: float) -> Dimension:
     ends = (cut.axis, y), (cut.end, y)
-    return Dimension(*ends, "horizontal", DIMENSION, size=NUMBER, outside=_outside(run, cut))
+    return Dimension(*ends, "horizontal", -drop, size=NUMBER, outside=cut.outside)
 
 
 def bars_in_place(view: View, bars: Sequence[BarRun], cover: float) -> list[Shape]:
