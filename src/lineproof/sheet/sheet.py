@@ -7,22 +7,21 @@ from pathlib import Path
 from typing import Any, ClassVar
 
 from lineproof.errors import UserError
-from lineproof.formula import Criterion, Formula, Notation, Symbol, System, symbol_from_id
+from lineproof.formula import Criterion, Formula, Notation, System
 from lineproof.formula import formula as read_formula
 from lineproof.formula.notation import check_id
 from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
-from lineproof.record import Entry, Part, Procedure, Record
+from lineproof.record import Entry, Part, Record
 from lineproof.record.build import build
 from lineproof.record.entry import CHECK, DECISION, GIVEN, LINE, LOOKUP
 from lineproof.record.sources import GivenSource, LookupSource
-from lineproof.sheet.finding import NOT_COMPUTED, Wanted, found_set
+from lineproof.sheet.finding import NOT_COMPUTED, Finding
 from lineproof.sheet.order import in_order, out_of_date
 from lineproof.sheet.own import own_criterion
 from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.parts import check_calc_id, check_key
 from lineproof.sheet.project import read_project
-from lineproof.sheet.shown import Shown
 from lineproof.sheet.tables import LookupTable
 
 
@@ -33,7 +32,7 @@ class PartView:
         self.sheet, self.key = sheet, key
 
 
-class Sheet(Shown):
+class Sheet(Finding):
     """A calculation being made.
 
     Everything is recorded inside a part; opening an existing key again replaces that part in
@@ -194,13 +193,6 @@ class Sheet(Shown):
             Entry(self._open_part(), name, LINE, formula, args, value, extra or None)
         )
 
-    def _failed(
-        self, source: Formula | Criterion, args: tuple[Entry, ...], error: Exception | None
-    ) -> UserError:
-        with_values = ", ".join(repr(a) for a in args)
-        why = "division by zero" if isinstance(error, ZeroDivisionError) else "no real number"
-        return UserError(f"{source.text!r} cannot be computed ({why}) with {with_values}")
-
     # -- comparisons -------------------------------------------------------------------------
 
     def decide(
@@ -259,64 +251,6 @@ class Sheet(Shown):
         key = key or test.key
         check_key(key)
         return self._record(Entry(self._open_part(), key, kind, test, args, sides, extra))
-
-    def _sides(self, test: Criterion, args: tuple[Entry, ...]) -> tuple[float, float]:
-        values = [a.value for a in args]
-        try:
-            left, right = (side(*values) for side in test.functions)
-        except NOT_COMPUTED as error:
-            raise self._failed(test, args, error) from None
-        if not all(isinstance(v, float) and v - v == 0.0 for v in (left, right)):
-            raise self._failed(test, args, None)
-        return left, right
-
-    # -- found values --------------------------------------------------------------------------
-
-    def found(
-        self,
-        symbol: str,
-        procedure: Procedure,
-        closing: Criterion,
-        *,
-        unit: str,
-        title: str = "",
-        clause: str = "",
-        basis: str = "",
-        settings: Mapping[str, float] | None = None,
-        **bound: Entry,
-    ) -> Entry:
-        """Record a value found by a procedure, with the criterion that closes it.
-
-        The closing criterion may name the found symbol, the procedure's arguments and whatever
-        else is in scope; if it does not hold the value is refused.
-        """
-        names = procedure.names or ()
-        inner = {n: e for n, e in bound.items() if n in names}
-        args = dict(zip(names, self._arguments(names, inner), strict=True))
-        wanted = Wanted(symbol, closing, unit, args, settings or {}, title, clause, basis, bound)
-        return found_set(self, procedure, [wanted])[symbol]
-
-    def found_set(self, procedure: Procedure, wanted: Iterable[Wanted]) -> dict[str, Entry]:
-        """Record values found together, each closed by a criterion that may name the others."""
-        return found_set(self, procedure, wanted)
-
-    def take_in(
-        self, symbol: str, kind: str, source: Any, args: tuple[Entry, ...], value: float
-    ) -> Entry:
-        """Record an entry made elsewhere in the room inside the open part."""
-        return self._record(Entry(self._open_part(), symbol, kind, source, args, value))
-
-    def compared(
-        self, test: Criterion, bound: Mapping[str, Entry]
-    ) -> tuple[tuple[Entry, ...], tuple[float, float]]:
-        """Return the arguments of a criterion and both its sides."""
-        args = self._arguments(test.names, bound)
-        return args, self._sides(test, args)
-
-    def symbol(self, symbol: str, title: str) -> Symbol:
-        """Return what the notation says of a symbol, else what its id says."""
-        known = self.notation.get(symbol)
-        return known if known is not None else symbol_from_id(symbol, title)
 
     # -- closing -----------------------------------------------------------------------------
 
