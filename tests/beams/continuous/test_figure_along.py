@@ -13,6 +13,7 @@ from lineproof.beams.analysis.model import (
     Support,
     UniformLoad,
 )
+from lineproof.beams.continuous.figure_along import in_figures
 from lineproof.beams.continuous.figure_deflection import (
     DeflectionCurve,
     DeflectionPiece,
@@ -77,6 +78,17 @@ def test_cantilevers_are_readable(lengths: tuple[float, ...]) -> None:
         deflection_figure(beam, deflections(beam, ("immediate", "total"))),
     ):
         assert_readable(figure, DIMENSIONS)
+
+
+def test_long_beams_take_several_figures() -> None:
+    """24 spans in four figures of six, each readable, none lost."""
+    beam = outline(LENGTHS * 4)
+    groups = in_figures(moments(beam))
+
+    assert [piece.span for group in groups for piece in group] == list(range(1, 25))
+    for group in groups:
+        assert len(group) == 6
+        assert_readable(moment_figure(beam, group), DIMENSIONS)
 
 
 def one_span(M_r: float = 500e6) -> MomentPiece:

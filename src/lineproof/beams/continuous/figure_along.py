@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from typing import TypeVar
 
 from lineproof.beams.continuous.figure_rows import in_rows
 from lineproof.beams.continuous.layout import BeamOutline
@@ -78,6 +79,27 @@ class _Band:
     places: tuple[tuple[int, float], ...]
     row: float
     height: float
+
+
+Piece = TypeVar("Piece")
+MOST_SPANS = 6
+
+
+def in_figures(pieces: Sequence[Piece], most: int = MOST_SPANS) -> tuple[tuple[Piece, ...], ...]:
+    """Divide the pieces of a long beam evenly, one figure each, of at most ``most`` spans.
+
+    >>> in_figures([1, 2, 3, 4, 5, 6, 7])
+    ((1, 2, 3, 4), (5, 6, 7))
+    """
+    rows = -(-len(pieces) // most)
+    least, more = divmod(len(pieces), max(rows, 1))
+    found: list[tuple[Piece, ...]] = []
+    first = 0
+    for row in range(rows):
+        last = first + least + (row < more)
+        found.append(tuple(pieces[first:last]))
+        first = last
+    return tuple(found)
 
 
 def along_figure(outline: BeamOutline, data: Along, caption: str) -> Figure:

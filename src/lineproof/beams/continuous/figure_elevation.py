@@ -13,7 +13,7 @@ from lineproof.beams.continuous.figure_elevation_bars import (
 from lineproof.beams.continuous.figure_elevation_concrete import STUB, axis_lines, concrete
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, parts, view
 from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
-from lineproof.beams.continuous.layout import BeamOutline, Detailing
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.drawing import LIGHT, OUTLINE, Arrow, Dimension, Figure, Line, Shape, Text, words
 from lineproof.drawing.metrics import text_width
 from lineproof.drawing.paper import FIT_MARGIN
@@ -54,8 +54,8 @@ def elevation_figure(
     ``detailing`` has its marks (:func:`lineproof.beams.continuous.schedule.schedule`).
     """
     seen = view(outline, detailing, spans or (1, len(outline.lengths)), width)
-    top = [run for run in detailing.bars if run.face == "top" and run.place != "side face"]
-    low = [run for run in detailing.bars if run not in top]
+    top = [run for run in detailing.bars if _above(run)]
+    low = [run for run in detailing.bars if not _above(run)]
     rows_up, rows_down = pulled_bars(seen, top, grade), pulled_bars(seen, low, grade)
     tops, ceiling = levels(rows_up, TOP_ROW, 1)
     zones, zone_height = zone_block(seen, detailing.stirrups, -seen.deepest * seen.scale - STUB)
@@ -83,6 +83,11 @@ def elevation_figure(
         _alt(seen, detailing),
         _caption(seen),
     )
+
+
+def _above(run: BarRun) -> bool:
+    """Tell whether a run is drawn above the beam."""
+    return run.face == "top" and run.place != "side face"
 
 
 def _section_marks(seen: View, sections: Sequence[Section]) -> list[Shape]:

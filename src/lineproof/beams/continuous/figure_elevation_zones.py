@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from itertools import pairwise
 
 from lineproof.beams.continuous.figure_elevation_view import View
+from lineproof.beams.continuous.figure_rows import side_by_side
 from lineproof.beams.continuous.layout import StirrupZone
 from lineproof.drawing import MEDIUM, THIN, Line, Runs, Shape, Text
 from lineproof.drawing.axes import spread
@@ -85,23 +85,9 @@ def _in_one_row(
 ) -> list[float]:
     """Places of the names in one row, moved apart; none if one would stand too far away."""
     widths = [max(text_width(line, SIZE) for line in lines) for lines in names]
-    places = list(middles)
-    for _ in range(200):
-        for left, right in pairwise(range(len(places))):
-            lack = (widths[left] + widths[right]) / 2 + APART - (places[right] - places[left])
-            if lack > 0.0:
-                places[left] -= lack / 2
-                places[right] += lack / 2
-        places = [
-            min(max(place, width / 2 + 0.5), view.width - width / 2 - 0.5)
-            for place, width in zip(places, widths, strict=True)
-        ]
-    apart = all(
-        places[right] - places[left] >= (widths[left] + widths[right]) / 2 + APART - 0.1
-        for left, right in pairwise(range(len(places)))
-    )
-    near = all(abs(a - b) <= FARTHEST for a, b in zip(places, middles, strict=True))
-    return places if apart and near else []
+    places = side_by_side(widths, middles, 0.5, view.width - 0.5, APART)
+    near = all(abs(a - b) <= FARTHEST for a, b in zip(places, middles, strict=False))
+    return places if near else []
 
 
 def _flat(view: View, zone: StirrupZone, middle: float, place: float, y: float) -> list[Shape]:

@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from itertools import pairwise
 
 APART = 1.6
-ROUNDS = 300
+ROUNDS, SETTLED = 300, 1e-4
 
 
 def side_by_side(
@@ -19,12 +19,13 @@ def side_by_side(
     >>> side_by_side([10.0, 10.0], [20.0, 25.0], 0.0, 100.0, 2.0)
     [16.5, 28.5]
     """
-    if sum(widths) + apart * (len(widths) - 1) > high - low:
+    if not widths or sum(widths) + apart * (len(widths) - 1) > high - low:
         return []
     order = sorted(range(len(wanted)), key=lambda index: wanted[index])
     places = [wanted[index] for index in order]
     sizes = [widths[index] for index in order]
     for _ in range(ROUNDS):
+        before = list(places)
         for left, right in pairwise(range(len(places))):
             lack = (sizes[left] + sizes[right]) / 2 + apart - (places[right] - places[left])
             if lack > 0.0:
@@ -34,6 +35,8 @@ def side_by_side(
             min(max(place, low + size / 2), high - size / 2)
             for place, size in zip(places, sizes, strict=True)
         ]
+        if max(abs(a - b) for a, b in zip(before, places, strict=True)) < SETTLED:
+            break
     places = _pushed(places, sizes, low, high, apart)
     result = [0.0] * len(places)
     for index, place in zip(order, places, strict=True):
