@@ -284,12 +284,22 @@ def _front_key(printed: PrintedRow) -> int:
 
 
 def _once_named(rows: Iterable[PrintedRow]) -> tuple[PrintedRow, ...]:
-    """Name a basis where it begins, not again on the lines that share it."""
+    """Name a basis where it begins, not again on the lines that share it.
+
+    So it is with the numbers that values found together share: they stand where the first is.
+    """
     made = []
     last = ""
+    first: PrintedRow | None = None
     for printed in rows:
-        made.append(replace(printed, basis="") if printed.basis == last else printed)
+        row = replace(printed, basis="") if printed.basis == last else printed
         last = printed.basis
+        if first is not None and printed.inputs and printed.inputs == first.inputs:
+            text = printed.text.removesuffix("with") + f"with the numbers of line {first.label}."
+            row = replace(row, inputs=(), origins=(), text=text)
+        elif printed.inputs:
+            first = printed
+        made.append(row)
     return tuple(made)
 
 
