@@ -22,10 +22,16 @@ from lineproof.sheet import Sheet
 
 AGREEMENT, TESTS = "agreement", "tests"
 BENDING = ("T1", "T2", "T3")
+_GROUPS = (
+    ("all", WITHOUT + WITH, "all twelve beams in shear"),
+    ("pl", WITHOUT, "beams without stirrups"),
+    ("st", WITH, "beams with stirrups"),
+    ("M", BENDING, "bending tests"),
+)
 _COLUMNS = ["Case", "Quantity", "Published", "Predicted", "Ratio", "Source", "Basis"]
-_WIDTHS = (11.0, 40.0, 22.0, 24.0, 13.0, 21.0, 19.0)
+_WIDTHS = (12.0, 52.0, 25.0, 26.0, 14.0, 23.0, 22.0)
 _SOURCE_COLUMNS = ["Short", "Source", "Cases", "Basis"]
-_SOURCE_WIDTHS = (22.0, 72.0, 30.0, 26.0)
+_SOURCE_WIDTHS = (24.0, 84.0, 38.0, 28.0)
 _ONE_MORE = 1
 
 
@@ -41,10 +47,12 @@ def record_agreement(sheet: Sheet) -> None:
                 rows.append(_row(case, published, entries[symbol], meaning))
                 on += [entries[symbol], entries[f"{symbol}{PUBLISHED}"]]
         sheet.table(
-            "agreement", _COLUMNS, rows, title=f"{len(rows)} published values",
-            rests_on=on, widths=_WIDTHS,
+            "agreement", _COLUMNS, rows, title=f"Predicted against published: {len(rows)} values",
+            rests_on=on, widths=_WIDTHS, front=5,
         )  # fmt: skip
-        sheet.table("sources", _SOURCE_COLUMNS, _sources(), title="Sources", widths=_SOURCE_WIDTHS)
+        sheet.table(
+            "sources", _SOURCE_COLUMNS, _sources(), title="Sources", widths=_SOURCE_WIDTHS, front=6
+        )
 
 
 def _sources() -> list[list[str]]:
@@ -68,10 +76,9 @@ def _row(case: Case, published: Published, predicted: Entry, quantity: str) -> l
 def record_tests(sheet: Sheet) -> None:
     """Record mean and scatter of test over prediction, the table of the tests and the figure."""
     with sheet.part(TESTS, "Test over prediction"):
-        _record_statistics(sheet, "all", WITHOUT + WITH, "all twelve beams in shear")
-        _record_statistics(sheet, "pl", WITHOUT, "beams without stirrups")
-        _record_statistics(sheet, "st", WITH, "beams with stirrups")
-        _record_statistics(sheet, "M", BENDING, "bending tests")
+        for group, names, what in _GROUPS:
+            _record_statistics(sheet, group, names, what)
+        _record_scatter(sheet)
         _record_table(sheet)
         _record_figure(sheet)
 
@@ -103,6 +110,17 @@ def _line(sheet: Sheet, text: str, title: str, bound: Mapping[str, Entry]) -> di
     return {symbol: sheet.line(text, unit="", title=title, **used)}
 
 
+def _record_scatter(sheet: Sheet) -> None:
+    """Record the table of means and scatter."""
+    columns = ["Test over prediction", "Tests", "Mean", "Coefficient of variation"]
+    rows, on = [], []
+    for group, names, what in _GROUPS:
+        mean, scatter = (sheet.entry(f"{TESTS}/{letter}_{group}") for letter in "mv")
+        rows.append([what, str(len(names)), f"{mean.value:.3f}", in_unit(scatter.value, "", 3)])
+        on += [mean, scatter]
+    sheet.table("scatter", columns, rows, title="Mean and scatter", rests_on=on, front=2)
+
+
 def _record_table(sheet: Sheet) -> None:
     columns = ["Beam", "V_n, kN", "V_m, kN", "V_p, kN", "V_te, kN", "Ratio"]
     rows, on = [], []
@@ -113,7 +131,7 @@ def _record_table(sheet: Sheet) -> None:
         rows.append([name, *(in_unit(e.value, "kN", 4) for e in shears), f"{ratio.value:.3f}"])
         on += made
     sheet.table(
-        "shear-tests", columns, rows, rests_on=on,
+        "shear-tests", columns, rows, rests_on=on, front=3,
         title="Beams of Vecchio and Shim, from memory: no text with their loads was opened",
     )  # fmt: skip
     columns = ["Pair", "M_r, kN.m", "M_te, kN.m", "Ratio"]
@@ -127,7 +145,12 @@ def _record_table(sheet: Sheet) -> None:
         )  # fmt: skip
         on += made
     sheet.table(
-        "bending-tests", columns, rows, rests_on=on, title="Doubly reinforced beams in bending"
+        "bending-tests",
+        columns,
+        rows,
+        rests_on=on,
+        front=4,
+        title="Doubly reinforced beams in bending",
     )
 
 
@@ -148,5 +171,5 @@ def _record_figure(sheet: Sheet) -> None:
     )
     sheet.figure(
         "ratios", to_json(figure), title=figure.caption, alt=figure.alt,
-        rests_on=[*ratios.values(), *means],
+        rests_on=[*ratios.values(), *means], front=1,
     )  # fmt: skip
