@@ -88,6 +88,10 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     ),
     "deflection_stages.UNCRACKED": ({"M_a": 37, "M_crd": 37.3}, {"M_a": 38, "M_crd": 37.3}),
     "deflection_stages.UNCRACKED_TOP": ({"M_a": 37, "M_crdn": 37.3}, {"M_a": 38, "M_crdn": 37.3}),
+    "deflection_stages.RISE_SMALL": (
+        {"delta_up": 4.9, "delta_max": 5},
+        {"delta_up": 5.1, "delta_max": 5},
+    ),
     # 8000^2*100e6/(4*25000*2e9) = 32 mm
     "deflection_stages.BOUND_SIMPLE": (
         {"delta_k": 31, "l": 8, "M_m": 100, "E_c": 25000, "I_crm": 2e9, "I_g": 5e9},

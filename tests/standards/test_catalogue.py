@@ -249,7 +249,7 @@ def _sum_of_terms(formula: Formula, values: list[float]) -> float:
     assert not any(isinstance(node, Negative) for node in walk(formula.tree))
     # Sines of these angles are at most 1, so that the bound stays one.
     functions = {
-        "sqrt": math.sqrt, "min": max, "max": max, "cot": cot, "sin": abs, "cos": abs,
+        "sqrt": math.sqrt, "min": max, "max": max, "cot": cot, "sin": abs, "cos": abs, "abs": abs,
         "__builtins__": {},
     }  # fmt: skip
     return float(eval(text, functions, scope))  # noqa: S307 - text of the catalogue

@@ -302,6 +302,14 @@ STAGES = (
     W("deflection_stages.MIDDLE", {"l": 7.6}, "7.6/2 = 3.8"),
     W("deflection_stages.LONG_TERM_PLAIN", {"S_t": 2}, "1 + 2 = 3.0"),
     W("deflection_stages.LONG_TERM_ATTACHED_PLAIN", {"S_ta": 1}, "1 + 1 = 2.0"),
+    W("deflection_stages.HOGGING_SIZE", {"M_s": 80}, "max(80, 0 - 80) = 80.0"),
+    W("deflection_stages.RISE", {"delta_D": 2, "delta_R": 0.5}, "2 - 0.5 = 1.5"),
+    # lying 3 mm above its level under sustained load: 1.0*3 more; below it nothing
+    W(
+        "deflection_stages.RISE_ATTACHED",
+        {"delta_D": 2, "delta_R": 1, "zeta_sa": 3, "zeta_s": 2, "delta_sus": 3},
+        "2 - 1 + max((3 - 2)*3, 0) = 4.0",
+    ),
     W("deflection_stages.CAMBER", {"zeta_s": 2.724, "delta_sus": 8}, "2.724*8 = 21.79"),
 )
 WORKED_SERVICE = (*LOADS, *ANALYSIS, *DEFLECTION, *STAGES)

@@ -94,14 +94,14 @@ def given_span(
     own = sheet.entries_of(f"span-{number}")
     places = {
         name: _place(sheet, number, name, place)
-        for name in ("midspan", "left", "right")
+        for name in ("midspan", "left", "right", "top")
         if (place := getattr(section, name)) is not None
     }
     return record.SpanEntries(
         number,
         {name: own[name] for name in ("l", "l_n", "h", "I_g", "y_b")},
         places.get("midspan"), places.get("left"), places.get("right"),
-        free=section.free, local=local,
+        free=section.free, local=local, top=places.get("top"),
     )  # fmt: skip
 
 
@@ -149,5 +149,10 @@ def record_span(
         symbols = ("M_m", *(f"M_h{end}" for end in entries.ends))
     moments = given_moments(service, "analysis of the test", symbols)
     return record.record_deflection(
-        sheet, entries, moments, arrangement=service.arrangement, **choices
+        sheet,
+        entries,
+        moments,
+        arrangement=service.arrangement,
+        lifting=service.lifting,
+        **choices,
     )

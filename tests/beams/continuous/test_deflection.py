@@ -280,6 +280,42 @@ def test_arrangement_and_shares_are_stated() -> None:
     assert sustained == pytest.approx((dead + total) / 2, rel=1e-12)
 
 
+def test_rise_of_an_uncracked_short_span_equals_sympy() -> None:
+    """Spans 9, 2.4, 9 m: live load on the outer ones lifts midspan of the short one."""
+    lengths = [9000, 2400, 9000]
+    beam, stiff = elastic(lengths, ["simple"] * 4)
+    dead: tuple[Load, ...] = tuple(UniformLoad("D", k, 22) for k in (1, 2, 3))
+    live: tuple[Load, ...] = tuple(UniformLoad("L", k, 15) for k in (1, 2, 3))
+    service = service_moments(beam, (*dead, *live), 2)
+    found = numbers.deflections(section_of(beam, 2, **stiff), service.stages, carries=FLOOR)
+    lifted = (*dead, live[0], live[2])
+    exact, only_dead = (
+        float(by_sympy(lengths, [0, 1, 2, 3], loads).deflection().subs(sympy.Symbol("x"), 10200))
+        for loads in (lifted, dead)
+    )
+
+    assert service.lifting == "live load on spans 1, 3"
+    assert service.arrangement == "live load on span 2"
+    assert found.stages["rise"].delta == pytest.approx(exact, rel=EXACT)
+    assert found.rise == pytest.approx(only_dead - exact, rel=1e-8)
+
+
+def test_rise_with_parts_attached_goes_on_by_creep() -> None:
+    """Above its level under sustained load: (3.0 - 2.0)*2 mm more than the live load alone."""
+    section = replace(BASE, f_r=1e6)
+    at = numbers.deflections(section, simple(10e6), carries=FLOOR).stages["all"].delta
+    moments = {
+        "dead": StageMoments(-10e6, 0, 0), "sustained": StageMoments(-20e6, 0, 0),
+        "all": StageMoments(0, 0, 0), "rise": StageMoments(-40e6, 0, 0),
+    }  # fmt: skip
+    floor = numbers.deflections(section, moments, carries=FLOOR)  # type: ignore[arg-type]
+    attached = numbers.deflections(section, moments, carries=PARTITIONS)  # type: ignore[arg-type]
+
+    assert floor.rise == pytest.approx(3 * at)
+    assert attached.rise == pytest.approx(3 * at + 2 * at)
+    assert attached.utilisation == pytest.approx(5 * at / (6600 / 480))
+
+
 def test_wind_is_left_out_and_named() -> None:
     loads: list[Load] = [UniformLoad("D", 1, 20), UniformLoad("W", 1, 3)]
     assert service_moments(beam_of([8000], ["simple"] * 2), loads, 1).left_out == ("W",)

@@ -23,6 +23,10 @@ from lineproof.standards.a23_3 import deflection_stages as stages
 FINAL = "5 years or more"
 ATTACHED = "3 months"
 DAMAGED = "roof or floor with parts attached that deflection damages"
+NO_TOP_BARS = (
+    "midspan: the moment under service load is hogging and cracks the section; its deflection "
+    "cannot be computed without top bars there: give those that run through the span"
+)
 LIVE_LIMITS = (
     "flat roof, nothing attached that deflection damages",
     "floor, nothing attached that deflection damages",
@@ -57,7 +61,8 @@ class SpanSection:
     """What bends: sizes and materials of one span, its sections at midspan and at both axes.
 
     ``left`` or ``right`` is None at a simple end and at a free end; ``midspan`` is None in a
-    cantilever. ``b_f`` is b_w without a flange.
+    cantilever. ``top`` is the web with the top bars at midspan, for spans that hog
+    there. ``h_f`` is 0 without a flange.
     """
 
     l: float
@@ -75,6 +80,7 @@ class SpanSection:
     right: Place | None
     free: FreeEnd = ""
     behind: Behind | None = None
+    top: Place | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -123,11 +129,13 @@ class Deflections:
     attached: float
     allowed: float
     by_live: bool
+    rise: float | None = None
 
     @property
     def utilisation(self) -> float:
-        """The deflection that is limited over its limit."""
-        return (self.live if self.by_live else self.attached) / self.allowed
+        """The deflection that is limited, or the rise where that may govern, over the limit."""
+        sag = self.live if self.by_live else self.attached
+        return max(sag, sag if self.rise is None else self.rise) / self.allowed
 
 
 def continuity(section: SpanSection) -> str:
@@ -185,13 +193,19 @@ def deflections(
     I_gw = section.b_w * section.h**3 / 12
     made = {
         name: cracked(place, section)
-        for name in ("midspan", "left", "right")
+        for name in ("midspan", "left", "right", "top")
         if (place := getattr(section, name)) is not None
     }
     bent = _Bent(section, M_crd, M_crdn, I_gw, made)
-    results = {stage: bent.stage(stage, moments[stage]) for stage in STAGES}
+    results = {stage: bent.stage(stage, each) for stage, each in moments.items()}
     zeta_s, zeta_sa = long_term(section, history)
     dead, sustained, total = (results[stage].delta for stage in STAGES)
+    by_live, rise = carries in LIVE_LIMITS, None
+    if "rise" in results:
+        lifted = results["rise"].delta
+        rise = stages.RISE.function(dead, lifted)
+        if not by_live:
+            rise = stages.RISE_ATTACHED.function(dead, lifted, zeta_sa, zeta_s, sustained)
     rest = clause.REST_OF_LIVE.function(total, sustained)
     return Deflections(
         M_crd, M_crdn, I_gw, made, results, zeta_s, zeta_sa,
@@ -200,7 +214,7 @@ def deflections(
         clause.TOTAL.function(zeta_s, sustained, rest),
         clause.AFTER_ATTACHMENT.function(zeta_s, zeta_sa, sustained, rest),
         clause.LARGEST.function(section.l_n, divisor),
-        carries in LIVE_LIMITS,
+        by_live, rise,
     )  # fmt: skip
 
 
@@ -233,7 +247,7 @@ class _Bent:
         if self.section.free:
             return self._cantilever(stage, moments)
         m, (e_m, e_1, e_2) = moments, moments.earlier
-        I_em = self._sagging(stages.LARGEST_SO_FAR.function(m.M_m, e_m), m.M_m)
+        I_em = self._at_midspan(m.M_m, e_m)
         I_e1 = self._hogging("left", stages.LARGEST_SO_FAR.function(m.M_h1, e_1))
         I_e2 = self._hogging("right", stages.LARGEST_SO_FAR.function(m.M_h2, e_2))
         M_q = with_points(m.M_m, self.section.l, m.points)
@@ -269,24 +283,27 @@ class _Bent:
         for point in from_far_end(section, m.behind):
             near = min(point.x, behind.l - point.x)
             M_mb += stages.POINT_LOAD_BEHIND.function(point.P, point.x, behind.l, near)
-        theta = stages.ROOT_ROTATION.function(behind.l, m.M_hb, M_mb, E_c, behind.I_ea[stage])
+        # Live load that lifts the tip lies on the span behind: it is as cracked as under all load.
+        I_bk = behind.I_ea["all" if stage == "rise" else stage]
+        theta = stages.ROOT_ROTATION.function(behind.l, m.M_hb, M_mb, E_c, I_bk)
         return StageResult(
             None, I_e, None, I_e, theta, stages.TIP.function(delta_b, theta, l)
         )  # fmt: skip
 
-    def _sagging(self, M_a: float, M: float) -> float:
-        if -self.M_crdn > M:
-            raise UserError(
-                "midspan: the moment under service load is hogging and cracks the section; its "
-                "deflection is not computed here: give this span its own calculation"
-            )
+    def _at_midspan(self, M: float, earlier: float) -> float:
+        if M < 0:
+            I_e = self._hogging("top", stages.HOGGING_SIZE.function(M))
+            if I_e is None:
+                raise UserError(NO_TOP_BARS)
+            return I_e
+        M_a = stages.LARGEST_SO_FAR.function(M, earlier)
         if M_a <= self.M_crd:
             return self.section.I_g
         I_cr = self.cracked["midspan"].I_cr
         return clause.EFFECTIVE.function(I_cr, self.section.I_g, self.M_crd, M_a)
 
     def _hogging(self, name: str, M_a: float) -> float | None:
-        if name not in self.cracked:
+        if name not in self.cracked and (name != "top" or M_a > self.M_crdn):
             return None
         if M_a <= self.M_crdn:
             return self.I_gw

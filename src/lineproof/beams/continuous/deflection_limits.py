@@ -20,14 +20,17 @@ _HISTORY = (
 )
 _ROOT = (
     "The deflection of the tip includes the rotation of the root by bending of the span behind. "
-    "Live load lies where it lets the tip sink most; a rise of the tip under live load on the span "
-    "behind is not checked here."
+    "Live load lies where it lets the tip sink most."
 )
 _MIDSPAN = (
     "Deflections are those at midspan, moments those at the axes of the supports. Sections are as "
     "cracked as the moments of the stage, or larger earlier ones that are stated, make them. The "
-    "largest deflection may lie beside midspan; the curvature along the span shows by how much. A "
-    "rise of the span under live load on other spans is not checked here."
+    "largest deflection may lie beside midspan; the curvature along the span shows by how much."
+)
+_RISE = "Live load that lifts the span most: {}."
+_NO_RISE = (
+    "Live load that lifts the span moves it less than live load that lets it sink, and the span "
+    "lies below its level under sustained load: a rise does not govern."
 )
 _CAMBER = (
     "For information: no camber is counted in the checks. Camber takes away from the total "
@@ -47,10 +50,11 @@ def record_limits(
     history: History,
     by_live: bool,
     arrangement: str,
+    lifting: str,
     local: Sequence[LocalLoad],
     ends: Sequence[str],
-) -> Entry:
-    """Record inside the open part long-term deflections and the check; return the check."""
+) -> tuple[Entry, Entry | None]:
+    """Record inside the open part long-term parts and checks; return those of sag and rise."""
     sheet = steps.sheet
     cantilever = row.endswith("cantilever")
     sheet.note("carries", f"The span carries: {carries}.", title="Limit of Table 9.3")
@@ -64,12 +68,22 @@ def record_limits(
     steps.bind(k_D=sheet.lookup("k_D", clause.LIMITS, carries))
     steps.line(clause.LARGEST)
     check = steps.check(clause.LIVE_SMALL if by_live else clause.ATTACHED_SMALL)
+    rise = _record_rise(steps, lifting, by_live=by_live)
     steps.line(stages.CAMBER)
     sheet.note("camber", _CAMBER, title="Camber", clause="9.8.5", basis=FROM_MEMORY)
     if not cantilever:
         sheet.note("beside", _BESIDE, title="Curvature", basis=COMMON_PRACTICE)
         _record_curvature(steps, ends, local)
-    return check
+    return check, rise
+
+
+def _record_rise(steps: Steps, lifting: str, *, by_live: bool) -> Entry | None:
+    note = _RISE.format(lifting) if lifting else _NO_RISE
+    steps.sheet.note("rise", note, title="Rise", basis=COMMON_PRACTICE)
+    if not lifting:
+        return None
+    steps.line(stages.RISE if by_live else stages.RISE_ATTACHED)
+    return steps.check(stages.RISE_SMALL)
 
 
 def _sentence(words: str) -> str:

@@ -20,8 +20,8 @@ class LocalLoad:
     """A point load (P_s at x_P) or a partial load (w_p from x_1 to x_2), as recorded.
 
     Stations from the left axis of the span. ``live`` load acts in the stage of all load, and with
-    ``share`` of it in the sustained stage (None: nothing of it). Live load that is not on this span
-    in the arrangement is left out by whoever lists them.
+    ``share`` of it in the sustained stage (None: nothing of it); on the span behind a cantilever it
+    acts only where the tip is lifted. Sizes are those of the stage of all load.
     """
 
     bound: Mapping[str, Entry]
@@ -51,8 +51,19 @@ def record_local(
         "dead": [t for t in made if not t[0].live],
         "sustained": [t for t in made if not t[0].live or t[0].share is not None],
         "all": made,
+        "rise": [t for t in made if not t[0].live],
     }
-    return {stage: _sum(steps, stage, rows, letter) for stage, rows in terms.items() if rows}
+    if behind:  # live load on the span behind acts where the tip is lifted, and only there
+        terms |= {"sustained": terms["dead"], "all": terms["dead"], "rise": made}
+    sums: dict[Stage, Entry] = {}
+    recorded: dict[str, Entry] = {}
+    for stage, rows in terms.items():
+        words = " + ".join(_term(load, entry, stage) for load, entry in rows)
+        if rows and words not in recorded:
+            recorded[words] = _sum(steps, f"M_P{letter}{_ENDINGS[stage]}", words, rows)
+        if rows:
+            sums[stage] = recorded[words]
+    return sums
 
 
 def _points(
@@ -103,31 +114,29 @@ def _addition(
     return line(stages.POINT_LOAD, symbol=symbol, P_s=P_s, a_s=a_s, l=l)
 
 
-_ENDINGS: Mapping[Stage, str] = {"dead": "D", "sustained": "sus", "all": "DL"}
+_ENDINGS: Mapping[Stage, str] = {"dead": "D", "sustained": "sus", "all": "DL", "rise": "R"}
 
 
-def _sum(steps: Steps, stage: Stage, rows: Sequence[tuple[LocalLoad, Entry]], letter: str) -> Entry:
-    """Record the sum of what the loads of a stage add."""
-    bound: dict[str, Entry] = {}
-    words = []
-    for load, entry in rows:
-        bound[entry.symbol] = entry
-        share = load.share if load.live and stage == "sustained" else None
-        if share is not None:
-            bound[share.symbol] = share
-        words.append(entry.symbol if share is None else f"{share.symbol}*{entry.symbol}")
-    symbol = f"M_P{letter}{_ENDINGS[stage]}"
-    args: dict[str, Any] = bound
-    if words == [rows[0][1].symbol]:
+def _term(load: LocalLoad, entry: Entry, stage: Stage) -> str:
+    share = load.share if load.live and stage == "sustained" else None
+    return entry.symbol if share is None else f"{share.symbol}*{entry.symbol}"
+
+
+def _sum(steps: Steps, symbol: str, words: str, rows: Sequence[tuple[LocalLoad, Entry]]) -> Entry:
+    """Record the sum of what the loads of a stage add; one alone stands for itself."""
+    if words == rows[0][1].symbol:
         return rows[0][1]
+    bound: dict[str, Any] = {entry.symbol: entry for _, entry in rows}
+    bound |= {load.share.symbol: load.share for load, _ in rows if load.share is not None}
+    args = {name: entry for name, entry in bound.items() if name in words}
     return steps.sheet.line(
-        f"{symbol} = {' + '.join(words)}", unit="kN.m", system="kN-m",
+        f"{symbol} = {words}", unit="kN.m", system="kN-m",
         title="Addition to the moment for all of them", **args,
     )  # fmt: skip
 
 
 def points_at(loads: Sequence[LocalLoad], l: float, *, halved: bool) -> tuple[Point, ...]:
-    """Return the loads of all stages together as point loads, for curvatures."""
+    """Return the loads of the stage of all load as point loads, for curvatures."""
     made: list[Point] = []
     for load in loads:
         if not load.partial:

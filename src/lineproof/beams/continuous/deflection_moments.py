@@ -24,13 +24,17 @@ _EARLIER = ("M_aem", "M_ae1", "M_ae2")
 
 
 def stage_sums(
-    dead: Mapping[str, Entry], live: Mapping[str, Entry], r_Ls: Entry, **earlier: Entry
+    dead: Mapping[str, Entry],
+    live: Mapping[str, Entry],
+    r_Ls: Entry,
+    lifting: Mapping[str, Entry] | None = None,
+    **earlier: Entry,
 ) -> Moments:
     """Return moments of the stages as sums of those of dead and of live load.
 
     ``dead`` and ``live`` bind the same of ``M_m``, ``M_h1``, ``M_h2`` (cantilever: ``M_h``,
-    ``M_mb``, ``M_hb``); ``r_Ls`` is the share of the live load that is sustained. ``earlier`` may
-    bind ``M_aem``, ``M_ae1``, ``M_ae2``.
+    ``M_mb``, ``M_hb``); ``r_Ls`` is the share of the live load that is sustained; ``lifting`` binds
+    moments of live load that lifts the span. ``earlier`` may bind ``M_aem``, ``M_ae1``, ``M_ae2``.
     """
 
     def record(steps: Steps, stage: Stage) -> None:
@@ -39,8 +43,9 @@ def stage_sums(
             steps.bind(**dead)
             return
         formula = stages.STAGE_SUSTAINED if stage == "sustained" else stages.STAGE_ALL
+        acting = (lifting or {}) if stage == "rise" else live
         for symbol, M_sD in dead.items():
-            bound: dict[str, Any] = {"M_sD": M_sD, "M_sL": live[symbol]}
+            bound: dict[str, Any] = {"M_sD": M_sD, "M_sL": acting[symbol]}
             if stage == "sustained":
                 bound["r_Ls"] = r_Ls
             title = f"Moment {_PLACES[symbol]}, {WORDS[stage]}"

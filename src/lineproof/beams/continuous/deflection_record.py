@@ -11,11 +11,18 @@ from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
 from typing import Any
 
-from lineproof.beams.continuous.deflection import DAMAGED, LIVE_LIMITS, History, plain_materials
+from lineproof.beams.continuous.deflection import (
+    DAMAGED,
+    LIVE_LIMITS,
+    NO_TOP_BARS,
+    History,
+    plain_materials,
+)
 from lineproof.beams.continuous.deflection_limits import record_limits
 from lineproof.beams.continuous.deflection_local import LocalLoad, Sums, record_local
 from lineproof.beams.continuous.deflection_service import STAGES, FreeEnd, Stage
-from lineproof.beams.steps import Steps
+from lineproof.beams.steps import Steps, only
+from lineproof.errors import UserError
 from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -36,8 +43,14 @@ WORDS: Mapping[Stage, str] = {
     "dead": "dead load",
     "sustained": "dead load and sustained live load",
     "all": "dead load and all live load",
+    "rise": "dead load and live load where it lifts the span",
 }
-SYMBOLS: Mapping[Stage, str] = {"dead": "delta_D", "sustained": "delta_sus", "all": "delta_DL"}
+SYMBOLS: Mapping[Stage, str] = {
+    "dead": "delta_D",
+    "sustained": "delta_sus",
+    "all": "delta_DL",
+    "rise": "delta_R",
+}
 
 
 @dataclass(frozen=True)
@@ -47,7 +60,8 @@ class SpanEntries:
     ``midspan`` binds b, d, A_s; ``left`` and ``right`` bind d, A_s at continuous ends and are
     None elsewhere; each may bind A_sp and d_p, which are counted then. Sections at supports are the
     web, top in tension. ``behind`` is the number of the span behind a cantilever, whose deflections
-    must be recorded before; None where the root is fixed. ``l_behind`` is its length.
+    must be recorded before; None where the root is fixed. ``l_behind`` is its length. ``top`` binds
+    d and A_s of the top bars that run through midspan, for spans that hog there.
     """
 
     number: int
@@ -60,6 +74,7 @@ class SpanEntries:
     l_behind: Entry | None = None
     local: Sequence[LocalLoad] = ()
     local_behind: Sequence[LocalLoad] = ()
+    top: Bound | None = None
 
     @property
     def row(self) -> str:
@@ -87,9 +102,10 @@ class SpanEntries:
 
 @dataclass(frozen=True)
 class RecordedDeflection:
-    """The check that limits the deflection, or the decision that none is needed."""
+    """The check that limits the deflection, or the decision that none is needed; and the rise."""
 
     check: Entry
+    rise: Entry | None = None
     entries: Mapping[str, Entry] = field(default_factory=dict)
 
 
@@ -99,14 +115,16 @@ def record_deflection(
     moments: Moments,
     *,
     carries: str,
+    lifting: str,
     history: History | None = None,
     arrangement: str = "",
     calculate: bool = False,
 ) -> RecordedDeflection:
     """Record the deflections of one span; ``arrangement`` says in words where live load lies.
 
-    ``calculate`` also where the span-depth table asks for no calculation: a span behind a
-    cantilever needs it.
+    ``lifting`` says where it lies to lift the span, where that may govern (the stage "rise" is then
+    recorded and checked), and is "" where it cannot (``ServiceMoments.lifting``). ``calculate``
+    also where the span-depth table asks for no calculation: a span behind a cantilever needs it.
     """
     key = f"deflection-{span.number}"
     steps = Steps(sheet, span.span)
@@ -119,20 +137,21 @@ def record_deflection(
         _record_sections(steps, span)
         sums = record_local(steps, span.local, cantilever=span.free)
         behind = _record_behind(steps, span)
-    for stage in STAGES:
+    for stage in (*STAGES, *(("rise",) if lifting else ())):
         with sheet.part(f"{key}-{stage}", f"Deflection of {span.name}: {WORDS[stage]}"):
             own = Steps(sheet, steps.place)
             _record_stage(own, span, moments, stage, (sums, behind))
             steps.bind(**{SYMBOLS[stage]: own.entry(SYMBOLS[stage])})
-    steps.bind(**{n: own.place[n] for n in ("M_m", "M_h1", "M_h2", "M_h") if n in own.place})
+        if stage == "all":
+            steps.bind(**only(own.place, ("M_m", "M_h1", "M_h2", "M_h")))
     steps.bind(**_ratio_rests_on(steps, span))
     with sheet.part(key, f"Deflection of {span.name}: limits"):
-        check = record_limits(
+        check, rise = record_limits(
             steps, span.row, carries=carries, history=history or History(),
-            by_live=carries in LIVE_LIMITS, arrangement=arrangement, local=span.local,
-            ends=tuple(span.ends),
+            by_live=carries in LIVE_LIMITS, arrangement=arrangement, lifting=lifting,
+            local=span.local, ends=tuple(span.ends),
         )  # fmt: skip
-    return RecordedDeflection(check, sheet.entries_of(key))
+    return RecordedDeflection(check, rise, sheet.entries_of(key))
 
 
 def named(
@@ -173,10 +192,12 @@ def _record_sections(steps: Steps, span: SpanEntries) -> None:
         steps.line(clause.CRACKING_BOTTOM)
         _record_cracked(steps, span.midspan, "m", "at midspan")
     b_w = steps.entry("b_w")
-    if span.ends:
+    if span.ends or span.top is not None:
         steps.line(stages.CRACKING_WEB)
         title = "Moment of inertia of the web, not cracked"
         named(steps, flange.INERTIA_RECTANGLE, "I_gw", title, b_w=b_w)
+    if span.top is not None:
+        _record_cracked(steps, {"b": b_w, **span.top}, "t", "hogging at midspan")
     for end, bound in span.ends.items():
         where = "at the root" if span.free else f"at the {('left', 'right')[end == '2']} support"
         _record_cracked(steps, {"b": b_w, **bound}, end, where)
@@ -220,7 +241,7 @@ def _record_stage(
     if span.free:
         _record_tip(steps, span, stage, sums)
         return
-    I_em = _inertia(steps, "m", "M_m", "at midspan", I_g=steps.entry("I_g"))
+    I_em = _at_midspan(steps, span)
     M_m = _with_local(steps, "M_m", sums[0], stage)
     l, delta = steps.entry("l"), SYMBOLS[stage]
     ends = {
@@ -240,6 +261,17 @@ def _record_stage(
         named(steps, stages.SIMPLE_SPAN, delta, title, M_m=M_m, I_e=I_em, l=l)
 
 
+def _at_midspan(steps: Steps, span: SpanEntries) -> Entry:
+    """Record the effective inertia at midspan, of the web where the moment is hogging there."""
+    M_m = steps.entry("M_m")
+    if M_m.value >= 0:
+        return _inertia(steps, "m", "M_m", "at midspan", I_g=steps.entry("I_g"))
+    M_at = named(steps, stages.HOGGING_SIZE, "M_at", "", M_s=M_m)
+    if span.top is None and M_at.value > steps.entry("M_crdn").value:
+        raise UserError(f"span {span.number}, {NO_TOP_BARS}")
+    return _inertia(steps, "t", "M_at", "hogging at midspan", gives="I_em")
+
+
 def _record_tip(steps: Steps, span: SpanEntries, stage: Stage, sums: tuple[Sums, Sums]) -> None:
     I_e = _inertia(steps, "1", "M_h", "at the root")
     M_h = _with_local(steps, "M_h", sums[0], stage)
@@ -249,7 +281,9 @@ def _record_tip(steps: Steps, span: SpanEntries, stage: Stage, sums: tuple[Sums,
         named(steps, stages.TIP_FIXED, SYMBOLS[stage], title)
         return
     M_mb = _with_local(steps, "M_mb", sums[1], stage)
-    entries = steps.sheet.entries_of(f"deflection-{span.behind}-{stage}")
+    # Live load that lifts the tip lies on the span behind: it is as cracked as under all load.
+    as_in = "all" if stage == "rise" else stage
+    entries = steps.sheet.entries_of(f"deflection-{span.behind}-{as_in}")
     I_bk = entries["I_ea"] if "I_ea" in entries else entries["I_em"]
     steps.line(stages.ROOT_ROTATION, M_mb=M_mb, I_bk=I_bk)
     named(steps, stages.TIP, SYMBOLS[stage], title)
@@ -264,7 +298,9 @@ def _with_local(steps: Steps, symbol: str, sums: Sums, stage: Stage) -> Entry:
     return named(steps, stages.WITH_LOCAL_LOADS, place, "", M_s=M, M_P=M_P)
 
 
-def _inertia(steps: Steps, end: str, symbol: str, where: str, I_g: Entry | None = None) -> Entry:
+def _inertia(
+    steps: Steps, end: str, symbol: str, where: str, I_g: Entry | None = None, gives: str = ""
+) -> Entry:
     """Record the largest moment so far and the effective inertia of a place."""
     M_a, before = steps.entry(symbol), steps.place.get(f"M_ae{end}")
     if before is not None:
@@ -273,7 +309,7 @@ def _inertia(steps: Steps, end: str, symbol: str, where: str, I_g: Entry | None 
     top = end != "m"
     limit = steps.entry("M_crdn" if top else "M_crd")
     gross = steps.entry("I_gw") if I_g is None else I_g
-    bound = {"M_a": M_a, "I_g": gross, "I_cr": steps.entry(f"I_cr{end}"), limit.symbol: limit}
+    bound = {"M_a": M_a, "I_g": gross, limit.symbol: limit}
     if M_a.value <= limit.value:
         test = stages.UNCRACKED_TOP if top else stages.UNCRACKED
         args: dict[str, Any] = {n: bound[n] for n in test.names}
@@ -281,4 +317,7 @@ def _inertia(steps: Steps, end: str, symbol: str, where: str, I_g: Entry | None 
         formula = stages.GROSS
     else:
         formula = clause.EFFECTIVE_TOP if top else clause.EFFECTIVE
-    return named(steps, formula, f"I_e{end}", f"Effective moment of inertia, {where}", **bound)
+        bound["I_cr"] = steps.entry(f"I_cr{end}")
+    return named(
+        steps, formula, gives or f"I_e{end}", f"Effective moment of inertia, {where}", **bound
+    )

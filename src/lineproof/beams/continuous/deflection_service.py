@@ -1,14 +1,17 @@
 """Service moments of one span by stages, with live load where it deflects this span most.
 
 Dead load lies on all spans. Every loaded span moves midspan of the span looked at (the tip of a
-cantilever) up or down; live load is placed on those that move it down. Snow lies on all spans.
+cantilever) up or down; live load is placed on those that move it down. Snow lies on all spans. A
+stage "rise", with live load on the spans that move the place up, stands beside where that may
+govern: where it moves the place more than the load that lets it sink, or where the place lies above
+its level under sustained load.
 
 Hogging moments are positive here: ``M_h1`` at the left axis, ``M_h2`` at the right axis. N and mm.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from typing import Literal
 
@@ -21,8 +24,9 @@ from lineproof.beams.analysis.solve import Row, Solution, solve
 from lineproof.errors import UserError
 from lineproof.standards.a23_3 import deflection_stages as clause
 
-Stage = Literal["dead", "sustained", "all"]
+Stage = Literal["dead", "sustained", "all", "rise"]
 STAGES: tuple[Stage, ...] = ("dead", "sustained", "all")
+"""The stages that every span has."""
 FreeEnd = Literal["", "left", "right"]
 """Which end of a span is free; "" for a span between supports."""
 
@@ -74,14 +78,25 @@ class ServiceMoments:
     factors: Mapping[Stage, Mapping[Row, float]]
     stages: Mapping[Stage, StageMoments]
     left_out: tuple[str, ...] = field(default=())
+    rise_case: str = ""
+    rise_spans: tuple[int, ...] = ()
 
     @property
     def arrangement(self) -> str:
         """The spans with live load in words."""
-        if not self.live_spans:
-            return "no live load"
-        word = "span" if len(self.live_spans) == 1 else "spans"
-        return f"live load on {word} {', '.join(map(str, self.live_spans))}"
+        return _in_words(self.live_spans)
+
+    @property
+    def lifting(self) -> str:
+        """The spans with live load that lift the span in words; "" where that cannot govern."""
+        return _in_words(self.rise_spans) if "rise" in self.stages else ""
+
+
+def _in_words(spans: tuple[int, ...]) -> str:
+    if not spans:
+        return "no live load"
+    word = "span" if len(spans) == 1 else "spans"
+    return f"live load on {word} {', '.join(map(str, spans))}"
 
 
 def free_end(beam: Beam, span: int) -> FreeEnd:
@@ -128,31 +143,62 @@ def service_moments(
     at = 0.0 if free == "left" else length if free == "right" else length / 2
     moved = solution.span(span).deflection(np.array([at]))[:, 0].tolist()
     kinds = dict.fromkeys(kind for kind, _ in solution.rows)
-    combinations = service_combinations(kind for kind in kinds if kind not in _LEFT_OUT)
-    tried = [(_placed(solution.rows, moved, c), c.name) for c in combinations]
-    at_all, name = max(
-        tried, key=lambda t: sum(f * y for f, y in zip(t[0].values(), moved, strict=True))
-    )
-    factors = {stage: _of_stage(stage, at_all, shares) for stage in STAGES}
+    acting = [kind for kind in kinds if kind not in _LEFT_OUT]
+    down, case = _chosen(solution.rows, moved, acting, 1.0)
+    up, rise_case = _chosen(solution.rows, moved, acting, -1.0)
+    factors = {stage: _of_stage(stage, down, shares) for stage in STAGES}
+    by_row = dict(zip(solution.rows, moved, strict=True))
+    if _may_govern(by_row, down, up, factors["sustained"]):
+        factors["rise"] = up
     rows = _rows_of(solution, span, free)
     return ServiceMoments(
         span,
         free,
-        name,
-        tuple(sorted({number for (kind, number), f in at_all.items() if kind in LIVE and f})),
-        {
-            stage: {row: f for row, f in all_rows.items() if f}
-            for stage, all_rows in factors.items()
-        },
-        {stage: _moments(beam, kept, rows, factors[stage]) for stage in STAGES},
+        case,
+        _live_spans(down),
+        {stage: {row: f for row, f in each.items() if f} for stage, each in factors.items()},
+        {stage: _moments(beam, kept, rows, each) for stage, each in factors.items()},
         tuple(kind for kind in kinds if kind in _LEFT_OUT),
+        rise_case,
+        _live_spans(up),
     )
 
 
+def _chosen(
+    rows: Sequence[Row], moved: Sequence[float], kinds: Iterable[str], sign: float
+) -> tuple[dict[Row, float], str]:
+    """Return factors and name of the combination that moves the place most: 1 down, -1 up."""
+    signed = [sign * y for y in moved]
+    tried = [(_placed(rows, signed, c), c.name) for c in service_combinations(kinds)]
+
+    def moves(each: tuple[dict[Row, float], str]) -> float:
+        return sum(f * y for f, y in zip(each[0].values(), signed, strict=True))
+
+    return max(tried, key=moves)
+
+
+def _may_govern(
+    moved: Mapping[Row, float],
+    down: Mapping[Row, float],
+    up: Mapping[Row, float],
+    sustained: Mapping[Row, float],
+) -> bool:
+    """Tell whether a rise may exceed the sag: elastic, of gross sections."""
+
+    def of(factors: Mapping[Row, float], *, dead: bool) -> float:
+        return sum(f * moved[row] for row, f in factors.items() if dead or row[0] != "D")
+
+    return -of(up, dead=False) > of(down, dead=False) or of(sustained, dead=True) < 0
+
+
+def _live_spans(factors: Mapping[Row, float]) -> tuple[int, ...]:
+    return tuple(sorted({number for (kind, number), f in factors.items() if kind in LIVE and f}))
+
+
 def _placed(
-    rows: Iterable[Row], moved: Iterable[float], combination: Combination
+    rows: Sequence[Row], moved: Sequence[float], combination: Combination
 ) -> dict[Row, float]:
-    """Return the factor of every row: live load only where it moves the place down."""
+    """Return the factor of every row: live load only where it moves the place that way."""
     factors = dict(combination.factors)
     return {
         row: factors.get(row[0], 0.0) if row[0] not in LIVE or y > 0 else 0.0

@@ -40,6 +40,13 @@ LARGEST_SO_FAR = _formula(
     basis=FROM_MEMORY,
     system="kN-m",
 )
+HOGGING_SIZE = _formula(
+    "M_a = abs(M_s)",
+    clause="9.8.2.3",
+    title="Size of the hogging moment",
+    basis=MECHANICS,
+    system="kN-m",
+)
 CRACKING_WEB = _formula(
     "M_crdn = f_rd*b_w*h**2/6",
     clause="9.8.2.3",
@@ -178,6 +185,27 @@ LONG_TERM_ATTACHED_PLAIN = _formula(
     title="Total over immediate deflection at attachment, no compression bars counted",
     basis=FROM_MEMORY,
 )
+RISE = _formula(
+    "delta_up = delta_D - delta_R",
+    clause="9.8.5.3",
+    title="Immediate rise due to live load",
+    basis=MECHANICS,
+)
+RISE_ATTACHED = _formula(
+    "delta_up = delta_D - delta_R + max((zeta_sa - zeta_s)*delta_sus, 0)",
+    clause="9.8.5.3",
+    title="Rise after attachment of the parts carried",
+    basis=FROM_MEMORY,
+)
+RISE_SMALL = _criterion(
+    "delta_up <= delta_max",
+    clause="9.8.5.3",
+    title="Rise due to load on other spans",
+    basis=FROM_MEMORY,
+    yes="The rise stays within the limit.",
+    no="The rise EXCEEDS the limit.",
+    key="deflection-rise",
+)
 CAMBER = _formula(
     "delta_cb = zeta_s*delta_sus",
     clause="9.8.5",
@@ -209,9 +237,10 @@ BOUND_BOTH_ENDS = _BOUND(
 )
 
 FORMULAS = (
-    STAGE_SUSTAINED, STAGE_ALL, LARGEST_SO_FAR, CRACKING_WEB, GROSS, SIMPLE_SPAN, ONE_END_SPAN,
-    CANTILEVER_BENDING, ROOT_ROTATION, TIP, TIP_FIXED, FROM_NEARER, FROM_RIGHT, POINT_LOAD,
-    POINT_LOAD_CANTILEVER, POINT_LOAD_BEHIND, WITH_LOCAL_LOADS, HALF_OF_PARTIAL, FIRST_POINT,
-    SECOND_POINT, MIDDLE, LONG_TERM_PLAIN, LONG_TERM_ATTACHED_PLAIN, CAMBER,
+    STAGE_SUSTAINED, STAGE_ALL, LARGEST_SO_FAR, HOGGING_SIZE, CRACKING_WEB, GROSS, SIMPLE_SPAN,
+    ONE_END_SPAN, CANTILEVER_BENDING, ROOT_ROTATION, TIP, TIP_FIXED, FROM_NEARER, FROM_RIGHT,
+    POINT_LOAD, POINT_LOAD_CANTILEVER, POINT_LOAD_BEHIND, WITH_LOCAL_LOADS, HALF_OF_PARTIAL,
+    FIRST_POINT, SECOND_POINT, MIDDLE, LONG_TERM_PLAIN, LONG_TERM_ATTACHED_PLAIN, RISE,
+    RISE_ATTACHED, CAMBER,
 )  # fmt: skip
-CRITERIA = (UNCRACKED, UNCRACKED_TOP, BOUND_SIMPLE, BOUND_ONE_END, BOUND_BOTH_ENDS)
+CRITERIA = (UNCRACKED, UNCRACKED_TOP, RISE_SMALL, BOUND_SIMPLE, BOUND_ONE_END, BOUND_BOTH_ENDS)
