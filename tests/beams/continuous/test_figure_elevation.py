@@ -224,6 +224,25 @@ def test_hooks_point_into_the_beam() -> None:
     assert "1-10M" in words_of(figure)
 
 
+@pytest.mark.parametrize("count", [1, 3])
+def test_ties_within_the_end_supports(count: int) -> None:
+    """Ties around hooks stand within the support; their name keeps clear of the others."""
+    beam = outline(LENGTHS[:count])
+    given = detailing(beam)
+    end = beam.ends[1]
+    ties = (
+        StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M"),
+        StirrupZone(count, end - 200.0, end - 50.0, 3, 75.0, "10M"),
+    )
+    made = schedule(beam, Detailing(given.bars, (*given.stirrups, *ties)))
+    figure = elevation_figure(beam, made.detailing)
+
+    assert_readable(figure, SOLID)
+    names = [text for text in words_of(figure) if "3-10M @ 75" in text]
+    assert len(names) == 2
+    assert (made.sets[0].first, made.sets[0].last) == (-400.0, -250.0)
+
+
 def test_words_say_what_is_drawn() -> None:
     """The alternative text gives spans, bars with places and zones."""
     alt = elevation().alt

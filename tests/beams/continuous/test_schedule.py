@@ -356,6 +356,10 @@ def test_contradictions_are_told() -> None:
     # 225 + 43.7 + 524.4 = 793.1, up to 800 mm; 620 - 2 x (30 + 11.3) = 537 mm
     assert "leg of 800 mm, more than the 537 mm" in told
     assert "8 at 125 mm do not reach from 275 to 1300 mm" in told
-    assert "leaves the clear length, 225 to 7375 mm" in told
+    assert "crosses the face of a support at 7375 mm" in told
     assert "begins before" in told
     assert contradictions(BEAM, detailing(BEAM)) == ()
+    ties = StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M")
+    assert contradictions(BEAM, Detailing((), (ties,))) == ()
+    (outside,) = contradictions(BEAM, Detailing((), (replace(ties, start=-325.0, number=5),)))
+    assert "from -325 to -25 mm reaches outside the concrete" in outside

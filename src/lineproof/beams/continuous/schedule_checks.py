@@ -65,11 +65,18 @@ def _zone_faults(outline: BeamOutline, zone: StirrupZone) -> list[str]:
             f"{name}: {zone.number} at {zone.spacing:.0f} mm do not reach from {zone.start:.0f} "
             f"to {zone.end:.0f} mm"
         )
-    if zone.start < start - SLACK or zone.end > end + SLACK:
+    low, high = outline.ends
+    if zone.start < low - SLACK or zone.end > high + SLACK:
         found.append(
-            f"{name}: from {zone.start:.0f} to {zone.end:.0f} mm leaves the clear length, "
-            f"{start:.0f} to {end:.0f} mm"
+            f"{name}: from {zone.start:.0f} to {zone.end:.0f} mm reaches outside the concrete, "
+            f"{low:.0f} to {high:.0f} mm"
         )
+    found += [
+        f"{name}: from {zone.start:.0f} to {zone.end:.0f} mm crosses the face of a support at "
+        f"{face:.0f} mm; write two zones"
+        for face in (start, end)
+        if zone.start < face - SLACK and zone.end > face + SLACK
+    ]
     if stirrup_hook(zone.size) > outline.b_w - 2 * outline.cover and not zone.closed:
         found.append(f"{name}: the hooks are longer than the stirrup is wide; write closed ones")
     return found

@@ -12,7 +12,8 @@ from lineproof.beams.continuous.schedule import BarItem, Schedule
 DASH = "–"
 STIRRUP_NOTE = (
     "From and to: first and last stirrup, from the left end of the clear length of the span (the "
-    "right face of its left support, or the free end). Sizes are outside to outside, width × "
+    "right face of its left support, or the free end); ties around hooks within an end support lie "
+    "outside that length. Sizes are outside to outside, width × "
     "height; open stirrups have 90° hooks turned inward, closed ones 135° hooks at one corner."
 )
 
