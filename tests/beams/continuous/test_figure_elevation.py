@@ -11,7 +11,7 @@ from lineproof.beams.continuous.figure_elevation import elevation_figure, elevat
 from lineproof.beams.continuous.figure_elevation_view import parts
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, StirrupZone
 from lineproof.beams.continuous.schedule import schedule
-from lineproof.drawing import OUTLINE, Dimension, Figure, Line, Text
+from lineproof.drawing import OUTLINE, Arc, Dimension, Figure, Line, Text
 
 from .by_hand import COLUMN, FREE_END, GIRDER, detailing, outline, random_beam
 from .print_checks import assert_readable, plain, words_of
@@ -221,6 +221,12 @@ def test_hooks_point_into_the_beam() -> None:
 
     assert_readable(figure, SOLID)
     assert [s.end[1] < s.start[1] for s in hooks] == [True, False]
+    (bend,) = [s for s in figure.shapes if isinstance(s, Arc)]
+    assert bend.centre[0] + bend.radius == pytest.approx(24575.0)
+    assert any(
+        s.layer == "bars" and s.end == pytest.approx((bend.centre[0], bend.centre[1] - bend.radius))
+        for s in figure.shapes if isinstance(s, Line)
+    )  # fmt: skip
     assert "1-10M" in words_of(figure)
 
 

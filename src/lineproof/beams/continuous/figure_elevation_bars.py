@@ -149,7 +149,10 @@ def _draw(view: View, bar: Pulled, height: float) -> list[Shape]:
     y = view.mm(height)
     run = bar.run
     turn = -1.0 if run.face == "top" else 1.0
-    shapes: list[Shape] = [Line((bar.start, y), (bar.end, y), "bars", OUTLINE)]
+    bend = view.mm(ROUND)
+    start = bar.start + (bend if run.hook_start == "180" and view.low <= run.start else 0.0)
+    end = bar.end - (bend if run.hook_end == "180" and run.end <= view.high else 0.0)
+    shapes: list[Shape] = [Line((start, y), (end, y), "bars", OUTLINE)]
     for at, hook, inward in ((run.start, run.hook_start, 1.0), (run.end, run.hook_end, -1.0)):
         if view.low <= at <= view.high:
             shapes.extend(_hook(view, hook, (at, y), inward, turn))
@@ -169,10 +172,10 @@ def _hook(
         return [Line(at, (x, y + turn * view.mm(HOOK)), "bars", OUTLINE)]
     if hook == "180":
         radius = view.mm(ROUND)
-        centre = (x, y + turn * radius)
+        centre = (x + inward * radius, y + turn * radius)
         angles = (90.0, 270.0) if inward > 0 else (270.0, 450.0)
         far = y + turn * 2 * radius
-        tail = Line((x, far), (x + inward * view.mm(1.6), far), "bars", OUTLINE)
+        tail = Line((centre[0], far), (centre[0] + inward * view.mm(1.6), far), "bars", OUTLINE)
         return [Arc(centre, radius, *angles, "bars", OUTLINE), tail]
     return []
 
