@@ -28,9 +28,11 @@ from lineproof.beams.continuous.deflection_service import (
     Stage,
     StageMoments,
     service_moments,
+    sustained_share,
 )
 from lineproof.errors import UserError
 from lineproof.standards.a23_3 import deflection as clause
+from lineproof.standards.nbc.loads import USES
 
 from .deflecting import E_C, FLOOR, PARTITIONS, beam_of, gross, section_of
 
@@ -314,6 +316,14 @@ def test_rise_with_parts_attached_goes_on_by_creep() -> None:
     assert floor.rise == pytest.approx(3 * at)
     assert attached.rise == pytest.approx(3 * at + 2 * at)
     assert attached.utilisation == pytest.approx(5 * at / (6600 / 480))
+
+
+def test_share_by_use_is_a_stated_assumption() -> None:
+    uses = set(USES.rows)
+    assert {"storage area", "library stack room", "office"} <= uses
+    assert sustained_share("storage area")[0] == "1.0"
+    assert sustained_share("library stack room")[0] == "1.0"
+    assert sustained_share("office") == ("0.5", "assumed, to be confirmed by the designer")
 
 
 def test_wind_is_left_out_and_named() -> None:

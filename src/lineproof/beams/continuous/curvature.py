@@ -17,6 +17,7 @@ from lineproof.beams.continuous.deflection_service import Point
 from lineproof.record import procedure
 
 PIECES = 200
+_PARTS = np.linspace(0.0, 1.0, 2 * PIECES + 1)
 _CURVATURE = "curvature along the span, effective inertia at every station, Simpson"
 
 
@@ -52,7 +53,8 @@ class Shape:
 
 def stations(l: float) -> Floats:
     """Return the stations at which curvatures are taken: a Simpson pair a piece."""
-    return np.linspace(0.0, l, 2 * PIECES + 1)
+    made: Floats = _PARTS * l
+    return made
 
 
 def span_moments(

@@ -158,7 +158,7 @@ def named(
     steps: Steps, formula: Formula, symbol: str = "", title: str = "", **bound: Entry
 ) -> Entry:
     """Record a line under another symbol and title; it stands for that symbol from here on."""
-    args: dict[str, Any] = {n: e for n, e in (steps.place | bound).items() if n in formula.names}
+    args: dict[str, Any] = only(steps.place, formula.names) | only(bound, formula.names)
     made = steps.sheet.line(formula, symbol=symbol, title=title, **args)
     steps.bind(**{symbol or formula.symbol: made})
     return made

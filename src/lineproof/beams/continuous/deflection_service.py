@@ -34,6 +34,16 @@ SHARES: Mapping[str, float] = {"L": 0.5, "L_st": 1.0, "S": 0.0}
 """Share of each load type that is sustained, where nothing else is known: an assumption."""
 SHARE_ASSUMED = "assumed, to be confirmed by the designer"
 _LEFT_OUT = ("W", "E")
+_STORED = ("storage area", "library stack room")
+
+
+def sustained_share(use: str) -> tuple[str, str]:
+    """Return the share of the live load of a use that is sustained, and what to say of it.
+
+    >>> sustained_share("office")
+    ('0.5', 'assumed, to be confirmed by the designer')
+    """
+    return ("1.0" if use in _STORED else "0.5"), SHARE_ASSUMED
 
 
 @dataclass(frozen=True, slots=True)
