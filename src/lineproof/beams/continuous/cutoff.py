@@ -30,6 +30,7 @@ from lineproof.beams.continuous.resistance_cover import ratios, yield_force
 from lineproof.beams.continuous.resistance_demand import (
     NOTHING,
     SpanDemand,
+    Whole,
     demand_of,
     stretch_at,
 )
@@ -137,8 +138,8 @@ def moments(designed: Designed, face: Face, span: int, near: End, t: np.ndarray)
 def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) -> Point | None:
     """Return from where on the continuing bars of resistance M_r do alone, on whole mm.
 
-    Bottom bars: towards the near support; top bars: away from it, as far as midspan. None where
-    they do alone everywhere (bottom), or not even at midspan (top).
+    Bottom bars: towards the near support; top bars: away from it. None where they do alone
+    everywhere (bottom), or nowhere up to the far support (top).
     """
     designed = frame.designed
     demand = frame.demands[span - 1]
@@ -152,15 +153,39 @@ def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) 
             return None
         first = int(needed[0])
         return _between(designed, face, span, near, M_r, t[max(first - 1, 0)], t[first])
-    last_half = int(np.searchsorted(t, reach(designed, span), side="right"))
-    needed = needed[needed < last_half]
     half = half_of(designed, span, near)
-    if not len(needed):
+    last = _last_needed(needed, int(np.searchsorted(t, reach(designed, span), side="right")))
+    if last is None:
         return _between(designed, face, span, near, M_r, half, half)
-    last = int(needed[-1])
-    if last + 1 >= min(last_half, len(t)):
+    if last + 1 >= len(t):
         return None
     return _between(designed, face, span, near, M_r, t[last], t[last + 1])
+
+
+def _last_needed(needed: Whole, half: int) -> int | None:
+    """Return the last station that needs the bars of this support.
+
+    The last one in its half of the span, or of the stations without a break from the support on.
+    """
+    if not len(needed):
+        return None
+    breaks = np.flatnonzero(np.diff(needed) > 1)
+    unbroken = needed[breaks[0]] if len(breaks) else needed[-1]
+    own = needed[needed < half]
+    if not len(own):
+        return None
+    return int(max(own[-1], unbroken)) if needed[0] < half else int(own[-1])
+
+
+def far_face(designed: Designed, span: int, near: End) -> float:
+    """Return the distance of the far face from the near axis."""
+    far = designed.outline.supports[span if near == "left" else span - 1].half
+    return designed.outline.lengths[span - 1] - far
+
+
+def sag_at(designed: Designed, span: int) -> float:
+    """Return where the largest moment of a span stands along the beam."""
+    return designed.outline.axes[span - 1] + designed.forces.sag(span).x
 
 
 def reach(designed: Designed, span: int) -> float:

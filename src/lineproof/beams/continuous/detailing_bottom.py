@@ -11,6 +11,8 @@ from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from itertools import pairwise
 
+import numpy as np
+
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.continuous.anchorage import (
     available,
@@ -33,17 +35,19 @@ from lineproof.beams.continuous.cutoff import (
     floor50,
     full_moment,
     half_of,
+    local,
     no_further_need,
+    sag_at,
     support_of,
     worst_between,
     zone_at,
 )
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
-from lineproof.beams.continuous.laps import has_room, lap_length, split
+from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.resistance_cover import yield_force
-from lineproof.beams.continuous.resistance_demand import end_tension
+from lineproof.beams.continuous.resistance_demand import demand_at, end_tension
 from lineproof.standards.a23_3 import cutoff as clause
 
 CORNERS = 2
@@ -178,11 +182,18 @@ def _held(
         return False
     parts = [min(l_av / length, 1.0) for length in lengths]
     A_sd = sum(run.area * part for run, part in zip(inside, parts, strict=True))
-    if A_sd * yield_force(designed) < end_tension(designed, support):
+    if A_sd * yield_force(designed) < face_tension(designed, span, near):
         return False
     if designed.outline.supports[support - 1].kind != "simple":
         return True
     return max(lengths) <= limit_at_support(designed, span, near, inside)
+
+
+def face_tension(designed: Designed, span: int, near: End) -> float:
+    """Return the tension of the bottom bars at the face of an end support [N]."""
+    half = half_of(designed, span, near)
+    at = demand_at(designed, span, np.array([local(designed, span, near, half)]))
+    return max(float(at.bottom.F[0]), end_tension(designed, support_of(span, near)))
 
 
 def limit_at_support(designed: Designed, span: int, near: End, inside: Sequence[BarRun]) -> float:
@@ -242,7 +253,7 @@ def _cut(
     if earlier is not None:
         t = min(t, floor50(earlier.t - continuing_length(designed, "bottom", span, near, [run])))
     half = half_of(designed, span, near)
-    middle = sum(designed.outline.faces(span)) / 2
+    middle = sag_at(designed, span)
     face = axis_of(designed, span, near) + (half if near == "left" else -half)
     bounds = (min(face, middle), max(face, middle))
     while t - half + INTO_SUPPORT >= LEAST_SAVED:
@@ -256,10 +267,7 @@ def _cut(
 
 
 def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
-    """Return the corner bars of all spans: like bars run through supports, others are lapped.
-
-    Where there is no room for a lap the bars of both spans end in the support.
-    """
+    """Return the corner bars of all spans: like bars run through supports, others are lapped."""
     made = [corners[0]]
     for (span, before), (_, after) in pairwise(enumerate(corners, start=1)):
         axis = designed.outline.axes[span]
@@ -269,13 +277,9 @@ def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
             )
             continue
         small = min(before, after, key=lambda run: run.diameter)
-        large = max(before, after, key=lambda run: run.diameter)
-        number = max(designed.bars.bottom[k][0].number for k in (span - 1, span))
-        if has_room(designed, large, number):
-            half = lap_length(designed, replace(small, start=axis - 1, end=axis + 1)) / 2
-            made[-1] = replace(made[-1], end=axis + half)
-            after = replace(after, start=axis - half)  # noqa: PLW2901 - the bar that is lapped
-        made.append(after)
+        half = lap_length(designed, replace(small, start=axis - 1, end=axis + 1)) / 2
+        made[-1] = replace(made[-1], end=axis + half)
+        made.append(replace(after, start=axis - half))
     return made
 
 

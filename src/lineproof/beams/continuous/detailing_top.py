@@ -18,11 +18,11 @@ from lineproof.beams.continuous.cutoff import (
     Frame,
     Point,
     along,
-    axis_of,
     ceil50,
     continuing_length,
     depths,
     extension,
+    far_face,
     full_moment,
     half_of,
     no_further_need,
@@ -33,14 +33,16 @@ from lineproof.beams.continuous.cutoff import (
 )
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
 from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
-from lineproof.beams.continuous.resistance import span_at
 from lineproof.standards.a23_3 import cutoff as clause
 
 ALIKE = 1.2
 """Clear spans up to this ratio beside a support have top bars alike on both sides."""
+LONGEST_ALIKE = 0.7
+"""Top bars alike on both sides reach at most over this part of the clear spans."""
 LEAST_STEP = 300.0
 """Bars whose ends lie closer than this have one length."""
 SHARE_PAST = 3.0
@@ -88,17 +90,42 @@ def long_of(groups: Sequence[BarRun]) -> int:
 def lay_top(frame: Frame) -> tuple[BarRun, ...]:
     """Return all top bars of a beam."""
     designed = frame.designed
-    made: list[BarRun] = []
-    corners: dict[int, BarRun] = {}
-    for support in range(1, len(designed.outline.supports) + 1):
-        runs = _lay_support(frame, support)
-        if runs:
-            corners[support] = runs[0]
-            made += runs[1:]
-    string = _joined(designed, _with_holders(designed, corners))
-    middles = [_middle(designed, k) for k in range(1, len(designed.outline.lengths) + 1)]
-    pieces = [piece for run in (*string, *made) for piece in split(designed, run, middles)]
-    return tuple(pieces)
+    supports = range(1, len(designed.outline.supports) + 1)
+    reaches = {support: _reaches(frame, support) for support in supports}
+    spans = range(1, len(designed.outline.lengths) + 1)
+    for span in spans:
+        _fill(frame, span, reaches)
+    rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
+    corners = {support: row[0] for support, row in rows.items() if row}
+    others = [run for row in rows.values() for run in row[1:]]
+    string = joined(designed, with_holders(designed, corners))
+    middles = [_middle(designed, span) for span in spans]
+    return tuple(p for run in (*string, *others) for p in split(designed, run, middles))
+
+
+def _fill(frame: Frame, span: int, reaches: dict[int, dict[End, Reach]]) -> None:
+    """Lengthen bars that meet in a span until they carry it together."""
+    designed = frame.designed
+    ends = [(s, e) for s, e in ((span, "right"), (span + 1, "left")) if e in reaches[s]]
+    meeting = [(s, e) for s, e in ends if reaches[s][e].through]
+    bounds = designed.outline.faces(span)
+    length = ceil50(designed.outline.lengths[span - 1])
+    while meeting:
+        runs = [r for s, _ in ends for r in _placed_all(designed, s, reaches[s])]
+        if worst_between(frame, runs, "top", span, bounds) <= MARGIN:
+            return
+        if all(reaches[s][e].short >= length for s, e in meeting):
+            return
+        for s, e in meeting:
+            reaches[s][e] = _longer(reaches[s][e], length)
+
+
+def _longer(found: Reach, length: float) -> Reach:
+    """Return a reach longer by two steps: the long bars as far as the next axis, then the short."""
+    if found.long < length:
+        long = min(found.long + 2 * STEP, length)
+        return Reach(long, long if found.short >= found.long else found.short, found.through)
+    return Reach(length, min(found.short + 2 * STEP, length), found.through)
 
 
 def _middle(designed: Designed, span: int) -> float:
@@ -106,24 +133,28 @@ def _middle(designed: Designed, span: int) -> float:
     return axis + designed.outline.lengths[span - 1] / 2 // STEP * STEP
 
 
-def _lay_support(frame: Frame, support: int) -> list[BarRun]:
+def _reaches(frame: Frame, support: int) -> dict[End, Reach]:
+    """Return how far the top bars of a support reach into the spans beside it."""
     designed = frame.designed
     groups = groups_of(designed, support)
-    if not groups:
-        return []
-    number = long_of(groups)
     reaches: dict[End, Reach] = {}
     for side in SIDES:  # the side of the support that the span lies on
-        if designed.forces.has_span(support, side):
+        if groups and designed.forces.has_span(support, side):
             span = support - 1 if side == "left" else support
-            reaches[side] = _reach(frame, span, other(side), groups, number)
-    reaches = _alike(designed, support, reaches)
+            reaches[side] = _reach(frame, span, other(side), groups, long_of(groups))
+    return _alike(designed, support, reaches)
+
+
+def _placed_all(designed: Designed, support: int, reaches: dict[End, Reach]) -> list[BarRun]:
+    """Return the top bars of a support with their ends, the corners first."""
+    groups = groups_of(designed, support)
     made = []
     for index, run in enumerate(groups):
         ended = run
         for side in SIDES:
             found = reaches.get(side)
-            t = None if found is None else (found.long if index < number else found.short)
+            long = index < long_of(groups)
+            t = None if found is None else (found.long if long else found.short)
             ended = _end(designed, support, side, ended, t)
         made.append(ended)
     return made
@@ -141,7 +172,7 @@ def _alike(designed: Designed, support: int, reaches: dict[End, Reach]) -> dict[
         return reaches
     long = max(r.long for r in reaches.values())
     short = max(r.short for r in reaches.values())
-    if any(long > designed.outline.lengths[span - 1] / 2 for span in spans):
+    if any(long > LONGEST_ALIKE * length for length in clear):
         return reaches
     return {side: Reach(long, short) for side in reaches}
 
@@ -174,23 +205,63 @@ def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
 def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], number: int) -> Reach:
     """Return how far long and short bars reach into a span."""
     designed = frame.designed
+    most = far_face(designed, span, near)
+    inflection = no_further_need(frame, "top", span, near, 0.0)
+    own = max(reach(designed, span), inflection.t if inflection else 0.0)
     if designed.cantilever(span):
         long, through = designed.outline.lengths[span - 1] - designed.end_cover, False
     else:
-        long, through = _long(frame, span, near, groups)
+        long, through = _long(frame, span, near, groups, inflection)
+    work = Work(frame, span, near, groups, number, own)
     short = long
     if number < len(groups):
-        long, short = _short(frame, span, near, groups, number, long)
+        long, short = _short(work, long)
     while not through and not designed.cantilever(span):
-        if _worst(frame, span, near, groups, number, (long, short)) <= MARGIN:
+        if _worst(work, (long, short)) <= MARGIN:
             break
         short = short + STEP if short == long else short
         long += STEP
-        through = long >= designed.outline.lengths[span - 1] / 2
+        through = long >= most
     if through:
-        lap = lap_length(designed, groups[0])
-        long = ceil50(designed.outline.lengths[span - 1] / 2 + lap / 2)
+        whole = short >= long
+        long = _meeting(work)
+        short = long if whole else short
     return Reach(long, min(short, long), through)
+
+
+def _meeting(work: Work) -> float:
+    """Return where bars end that meet those of the next support: past midspan by half a lap.
+
+    They go on to where those of the next support do alone, if that is further.
+    """
+    designed, span, near = work.frame.designed, work.span, work.near
+    length = designed.outline.lengths[span - 1]
+    lap = max(lap_length(designed, run) for run in work.groups)
+    t = ceil50(length / 2 + lap / 2)
+    beyond = groups_of(designed, support_of(span, other(near)))
+    point = no_further_need(
+        work.frame, "top", span, near, full_moment(designed, "top", span, beyond)
+    )
+    if point is None:
+        return max(t, ceil50(length))
+    d_b = max(run.diameter for run in work.groups)
+    return max(t, ceil50(point.t + extension(designed, "top", span, near, point.t, d_b)))
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Work:
+    """Top bars of a support while their reach into a span is sought.
+
+    The first ``number`` groups are long; ``own`` is the part of the span, from the axis of the
+    support, in which its bars carry the moment.
+    """
+
+    frame: Frame
+    span: int
+    near: End
+    groups: tuple[BarRun, ...]
+    number: int
+    own: float
 
 
 def past_inflection(designed: Designed, span: int, near: End, d_b: float) -> float:
@@ -200,10 +271,11 @@ def past_inflection(designed: Designed, span: int, near: End, d_b: float) -> flo
     return value(clause.LENGTH_PAST_INFLECTION, d=d, d_b=d_b, l_n=end - start)
 
 
-def _long(frame: Frame, span: int, near: End, groups: Sequence[BarRun]) -> tuple[float, bool]:
+def _long(
+    frame: Frame, span: int, near: End, groups: Sequence[BarRun], point: Point | None
+) -> tuple[float, bool]:
     """Return where the long bars end; True where they meet those of the next support."""
     designed = frame.designed
-    point = no_further_need(frame, "top", span, near, 0.0)
     if point is None:
         return designed.outline.lengths[span - 1] / 2, True
     d_b = max(run.diameter for run in groups)
@@ -212,48 +284,41 @@ def _long(frame: Frame, span: int, near: End, groups: Sequence[BarRun]) -> tuple
         extension(designed, "top", span, near, point.t, d_b),
     )
     t = ceil50(point.t + past)
-    return t, t >= designed.outline.lengths[span - 1] / 2
+    return t, t >= far_face(designed, span, near)
 
 
-def _short(
-    frame: Frame, span: int, near: End, groups: Sequence[BarRun], number: int, long: float
-) -> tuple[float, float]:
+def _short(work: Work, long: float) -> tuple[float, float]:
     """Return where long and short bars end."""
+    frame, span, near = work.frame, work.span, work.near
     designed = frame.designed
-    continuing = list(groups[:number])
-    point: Point | None = no_further_need(
-        frame, "top", span, near, full_moment(designed, "top", span, continuing)
-    )
+    continuing = list(work.groups[: work.number])
+    M_r = full_moment(designed, "top", span, continuing)
+    point = no_further_need(frame, "top", span, near, M_r)
     if point is None:
         return long, long
-    d_b = max(run.diameter for run in groups[number:])
+    d_b = max(run.diameter for run in work.groups[work.number :])
     short = ceil50(point.t + extension(designed, "top", span, near, point.t, d_b))
+    past = continuing_length(designed, "top", span, near, continuing)
     if not designed.cantilever(span):
-        past = continuing_length(designed, "top", span, near, continuing)
         long = max(long, ceil50(point.t + past))
+    elif long - point.t < past:
+        return long, long
     while short < long - LEAST_STEP:
         allowed = zone_at(designed, "top", span, near, short, continuing)
-        if allowed and _worst(frame, span, near, groups, number, (long, short)) <= MARGIN:
+        if allowed and _worst(work, (long, short)) <= MARGIN:
             return long, short
         short += STEP
     return long, long
 
 
-def _worst(
-    frame: Frame,
-    span: int,
-    near: End,
-    groups: Sequence[BarRun],
-    number: int,
-    reaches: tuple[float, float],
-) -> float:
-    """Return the worst ratio of these bars and those that hold the stirrups, as far as midspan."""
-    designed = frame.designed
+def _worst(work: Work, reaches: tuple[float, float]) -> float:
+    """Return the worst ratio of these bars and those that hold the stirrups, in their part."""
+    designed, span, near = work.frame.designed, work.span, work.near
     support = support_of(span, near)
     side = other(near)
     runs = []
-    for index, run in enumerate(groups):
-        t = reaches[0] if index < number else reaches[1]
+    for index, run in enumerate(work.groups):
+        t = reaches[0] if index < work.number else reaches[1]
         there = _placed(side, run, along(designed, span, near, t))
         if designed.forces.has_span(support, near):
             far = along(designed, span, near, -2 * designed.stock)
@@ -261,100 +326,12 @@ def _worst(
         else:
             runs.append(_end(designed, support, near, there, None))
     if not designed.cantilever(span):
-        runs.append(_holder(designed, span, near, reaches[0]))
-    half = half_of(designed, span, near)
-    x = sorted(along(designed, span, near, t) for t in (half, reach(designed, span)))
-    return worst_between(frame, runs, "top", span, (x[0], x[1]))
-
-
-def _holder(designed: Designed, span: int, near: End, t: float) -> BarRun:
-    """Return the bars that hold the stirrups from one support's corner bars to beyond midspan."""
-    far = designed.outline.lengths[span - 1]
-    bare = BarRun("top", 1, CORNERS, designed.bars.holders, 0.0, 0.0, serves="holds the stirrups")
-    lap = _holder_lap(designed, span)
-    x = sorted(along(designed, span, near, at) for at in (t - lap, max(far, t + 2 * lap)))
-    return replace(bare, start=x[0], end=x[1])
-
-
-def _holder_lap(designed: Designed, span: int) -> float:
-    axes = designed.outline.axes
-    whole = BarRun("top", 1, CORNERS, designed.bars.holders, axes[span - 1] + 1, axes[span] - 1)
-    return lap_length(designed, whole)
-
-
-def _with_holders(designed: Designed, corners: dict[int, BarRun]) -> list[BarRun]:
-    """Return corner bars and the bars that hold the stirrups between, from left to right."""
-    made: list[BarRun] = []
-    for span in range(1, len(designed.outline.lengths) + 1):
-        if span in corners:
-            made.append(corners[span])
-        if not designed.cantilever(span):
-            held = _between(designed, span, corners.get(span), corners.get(span + 1))
-            made += [held] if held is not None else []
-        elif span not in corners and span + 1 not in corners:
-            made.append(_bare(designed, span))
-    last = len(designed.outline.supports)
-    return [*made, corners[last]] if last in corners else made
-
-
-def _bare(designed: Designed, span: int) -> BarRun:
-    start, end = (
-        _outer(designed, span, near) if span in (1, len(designed.outline.lengths)) else 0.0
-        for near in SIDES
-    )
-    return BarRun("top", 1, CORNERS, designed.bars.holders, start, end, serves="holds the stirrups")
-
-
-def _outer(designed: Designed, span: int, near: End) -> float:
-    """Return where bars without top bars at a support start: its end cover, or its axis."""
-    support = support_of(span, near)
-    if support in (1, len(designed.outline.supports)):
-        t = designed.end_cover - half_of(designed, span, near)
-        return along(designed, span, near, t)
-    return axis_of(designed, span, near)
-
-
-def _between(
-    designed: Designed, span: int, left: BarRun | None, right: BarRun | None
-) -> BarRun | None:
-    """Return the bars that hold the stirrups of a span; None where the top bars meet."""
-    lap = _holder_lap(designed, span)
-    start = left.end if left else _outer(designed, span, "left")
-    end = right.start if right else _outer(designed, span, "right")
-    if left and right and end - start < 2 * lap:
-        return None
-    return BarRun(
-        "top", 1, CORNERS, designed.bars.holders, start - (lap if left else 0.0),
-        end + (lap if right else 0.0), serves="holds the stirrups",
-    )  # fmt: skip
-
-
-def _joined(designed: Designed, string: list[BarRun]) -> list[BarRun]:
-    """Return the corner string: like bars made one, others lapped."""
-    made: list[BarRun] = []
-    for run in string:
-        if made and made[-1].size == run.size:
-            serves = _serving(made[-1].serves, run.serves)
-            made[-1] = replace(made[-1], end=run.end, hook_end=run.hook_end, serves=serves)
-        elif made:
-            made += _lapped(designed, made.pop(), run)
+        held = holder(designed, span, near, reaches[0])
+        if held.size == runs[0].size:  # they will be one bar with the corners
+            far = held.end if side == "right" else held.start
+            runs[0] = _placed(side, runs[0], far)
         else:
-            made.append(run)
-    return made
-
-
-def _serving(first: str, second: str) -> str:
-    parts = [p for text in (first, second) for p in text.split(", ")]
-    return ", ".join(dict.fromkeys(parts))
-
-
-def _lapped(designed: Designed, before: BarRun, after: BarRun) -> list[BarRun]:
-    """Return two runs of different bars with the lap of the thinner between them."""
-    thin = min(before, after, key=lambda run: run.diameter)
-    span = span_at(designed.outline, (before.end + after.start) / 2)
-    lap = lap_length(designed, replace(thin, start=designed.outline.axes[span - 1] + 1))
-    short = lap - (before.end - after.start)
-    if short > 0:
-        before = replace(before, end=before.end + ceil50(short / 2))
-        after = replace(after, start=after.start - ceil50(short / 2))
-    return [before, after]
+            runs.append(held)
+    half = half_of(designed, span, near)
+    x = sorted(along(designed, span, near, t) for t in (half, work.own))
+    return worst_between(work.frame, runs, "top", span, (x[0], x[1]))

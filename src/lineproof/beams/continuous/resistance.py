@@ -21,7 +21,8 @@ from lineproof.standards.a23_3 import bars as bar_clause
 from lineproof.standards.a23_3 import shear
 from lineproof.standards.a23_3.bars import BARS
 
-LONGITUDINAL = ("bottom", "top")
+MOST_LAP = 100.0
+"""Longest overlap of like bars that is a lap, in bar diameters: more are two sets of bars."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -59,7 +60,9 @@ def alike(a: BarRun, b: BarRun) -> bool:
 
 def lapped(first: BarRun, second: BarRun) -> bool:
     """Tell whether the end of one run laps the start of the other, like bars in line."""
-    return alike(first, second) and first.start < second.start < first.end < second.end
+    if not (alike(first, second) and first.start < second.start < first.end < second.end):
+        return False
+    return first.end - second.start <= MOST_LAP * first.diameter
 
 
 def distance_of(designed: Designed, run: BarRun) -> float:
@@ -68,13 +71,14 @@ def distance_of(designed: Designed, run: BarRun) -> float:
     d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
     if run.layer == 1:
         return c_c + d_bs + run.diameter / 2
-    d_b = max(layer.diameter for layer in _first_layers(designed, run))
+    d_b = max(layer.diameter for layer in first_layers(designed, run))
     thicker = max(d_b, run.diameter)
     s_l = value(bar_clause.LAYER_DISTANCE, d_b=thicker, a_max=designed.strengths.a_max)
     return c_c + d_bs + d_b + s_l + run.diameter / 2
 
 
-def _first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
+def first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
+    """Return the first layers that a bar of a second layer stands over."""
     axes = designed.outline.axes
     if run.face == "bottom":
         places = zip(axes[:-1], axes[1:], designed.bars.bottom, strict=True)
@@ -135,13 +139,21 @@ def _distance_in(designed: Designed, run: BarRun, layers: BarLayers) -> float:
     return c_c + d_bs + d_b + s_l + run.diameter / 2
 
 
+def top_layers(designed: Designed, support: int) -> BarLayers:
+    """Return the top bars of a support by layer, those of the overhangs with the first one."""
+    top = designed.bars.top[support - 1]
+    if not top.web:
+        return (BarLayer(2, designed.bars.holders),)
+    first = top.web[0]
+    return (BarLayer(first.number + top.overhang, first.size), *top.web[1:])
+
+
 def section_depth(designed: Designed, face: Face, span: int, support: int = 0) -> float:
     """Return the effective depth of the bars below a span, or above a support in that span."""
     h = designed.outline.depths[span - 1]
     if face == "bottom":
         return effective_depth(designed, designed.bars.bottom[span - 1], h)
-    web = designed.bars.top[support - 1].web or (BarLayer(2, designed.bars.holders),)
-    return effective_depth(designed, web, h)
+    return effective_depth(designed, top_layers(designed, support), h)
 
 
 def shear_depth(d: float, h: float) -> float:

@@ -7,7 +7,7 @@ from functools import partial
 from lineproof.formula import FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
-from lineproof.standards.references import MECHANICS
+from lineproof.standards.references import MECHANICS, SHEAR_2004
 
 _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
@@ -29,6 +29,18 @@ CONTINUING = _formula(
     "l_co = l_d + max(d, 12*d_b)",
     clause="12.10.4",
     title="Length of continuing bars past that point",
+    basis=FROM_MEMORY,
+)
+TENSION = _formula(
+    "F_lt = M_f/d_v + (V_f - 0.5*min(V_s, V_f))*cot(theta)",
+    clause="11.3.9.2",
+    title="Force in the bars on the tension side",
+    basis=SHEAR_2004,
+)
+TENSION_OTHER_SIDE = _formula(
+    "F_lt = (V_f - 0.5*min(V_s, V_f))*cot(theta) - M_f/d_v",
+    clause="11.3.9.3",
+    title="Force in the bars, the moment pressing their side",
     basis=FROM_MEMORY,
 )
 PAST_INWARD = _formula(
@@ -218,9 +230,9 @@ LONG_PAST_INFLECTION = _criterion(
 )
 
 FORMULAS = (
-    EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD, PAST_OUTWARD, CONTINUING_INWARD,
-    CONTINUING_OUTWARD, IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION, LIMIT, LIMIT_CONFINED,
-    LENGTH_PAST_INFLECTION,
+    TENSION, TENSION_OTHER_SIDE, EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD,
+    PAST_OUTWARD, CONTINUING_INWARD, CONTINUING_OUTWARD, IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION,
+    LIMIT, LIMIT_CONFINED, LENGTH_PAST_INFLECTION,
 )  # fmt: skip
 CRITERIA = (
     EXTENDED, CONTINUES, SUFFICES, CUT_AT_LOW_SHEAR, CUT_AT_DOUBLE_AREA, CUT_AT_MODERATE_SHEAR,

@@ -1,0 +1,317 @@
+"""Recorded: development lengths of all bars, step by step, and what the other parts rest on."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Mapping
+from dataclasses import dataclass
+
+from lineproof.beams.continuous.anchorage import (
+    OTHER_ROW,
+    TOP_ROW,
+    Bar,
+    bar_of,
+    develop,
+    sides_of,
+)
+from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
+from lineproof.beams.continuous.forces import Demand, End
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import alike, lapped
+from lineproof.beams.steps import Steps
+from lineproof.formula import COMMON_PRACTICE
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import bars as bar_clause
+from lineproof.standards.a23_3 import cover, development, hooks, laps, minimum
+from lineproof.standards.a23_3.bars import BARS, STIRRUP_BENDS
+
+BY_TABLE = "The development length is that of the table; the general expression stands beside it."
+BY_GENERAL = "The development length is that of the general expression; the table stands beside it."
+
+
+def plain(value: float, unit: str) -> str:
+    """Return a number as it is typed, with 12 digits at most."""
+    return f"{value:.12g} {unit}".strip()
+
+
+def forces_as_given(steps: Steps, demand: Demand, near: End, x: Entry | None = None) -> None:
+    """Record moment and shear of a case as given numbers; another chapter derives them."""
+    del near, x
+    sheet = steps.sheet
+    source = f"analysis, {demand.case}"
+    M_f = sheet.given("M_f", plain(abs(demand.M) / 1e6, "kN.m"), source=source)
+    V_f = sheet.given("V_f", plain(abs(demand.V) / 1e3, "kN"), source=source)
+    steps.bind(M_f=M_f, V_f=V_f)
+
+
+def shear_as_given(steps: Steps, stretch: ShearStretch) -> None:
+    """Record the shear resistance of a stretch as given numbers."""
+    sheet = steps.sheet
+    steps.bind(
+        V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source="shear"),
+        V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source="shear"),
+        theta=sheet.given("theta", plain(stretch.theta, "deg"), source="shear"),
+    )
+
+
+@dataclass(frozen=True, eq=False)
+class Writers:
+    """How other chapters record what anchorage rests on.
+
+    ``span`` gives the entries of a span (h, l, l_n, b_f, b_o); ``forces`` records M_f and V_f of
+    a demand and binds them; ``shear`` records V_r, V_s and theta of a stretch and binds them.
+    """
+
+    sheet: Sheet
+    designed: Designed
+    span: Callable[[int], Mapping[str, Entry]]
+    forces: Callable[[Steps, Demand, End, Entry | None], None] = forces_as_given
+    shear: Callable[[Steps, ShearStretch], None] = shear_as_given
+
+
+Lengths = Mapping[Bar, Mapping[str, Entry]]
+"""Recorded entries (l_d0, l_d, l_s, d_b, A_b, ...) of every bar whose development is recorded."""
+
+
+def place_of(writers: Writers, span: int) -> dict[str, Entry]:
+    """Return the entries of a span that symbols stand for."""
+    entries = writers.span(span)
+    names = ("h", "l", "l_n", "b_f", "b_o")
+    return {name: entries[name] for name in names if name in entries}
+
+
+def key_of(designed: Designed, run: BarRun) -> Bar:
+    """Return the bar of a run as it is recorded."""
+    return bar_of(designed, run)
+
+
+def record_lengths(writers: Writers, runs: Iterable[BarRun]) -> Lengths:
+    """Record the development length of every kind of bar in a part of its own."""
+    designed = writers.designed
+    made: dict[Bar, Mapping[str, Entry]] = {}
+    kept = [run for run in runs if run.place != "side face"]
+    for run in sorted(kept, key=lambda r: (r.face, r.place, r.size)):
+        bar = key_of(designed, run)
+        if bar not in made:
+            made[bar] = _record_bar(writers, bar, len(made) + 1)
+    return made
+
+
+def _record_bar(writers: Writers, bar: Bar, number: int) -> dict[str, Entry]:
+    where = "in the overhang" if bar.place == "overhang" else f"{bar.number} in a layer"
+    title = f"Development of {bar.face} bars {bar.size}, {where}"
+    with writers.sheet.part(f"anchorage-bar-{number}", title):
+        steps = Steps(writers.sheet, _deep(writers, bar))
+        _record_geometry(steps, writers.designed, bar)
+        _record_factors(steps, writers.designed, bar)
+        _record_expressions(steps, writers.designed, bar)
+        steps.lines(development.L_D, laps.CLASS_B)
+    return steps.place
+
+
+def _deep(writers: Writers, bar: Bar) -> dict[str, Entry]:
+    """Return the entries of the span whose depth the bar was developed in."""
+    outline = writers.designed.outline
+    spans = [k for k, h in enumerate(outline.depths, start=1) if h == bar.h]
+    if bar.place == "overhang" and bar.room > 0:
+        sides = sides_of(outline)
+        spans = sorted(
+            spans,
+            key=lambda k: abs(
+                min((outline.widths[k - 1] - outline.b_w) / sides, outline.lengths[k - 1] / 20)
+                - bar.room
+            ),
+        )
+    return place_of(writers, spans[0])
+
+
+def _record_geometry(steps: Steps, designed: Designed, bar: Bar) -> None:
+    sheet, stirrup = steps.sheet, designed.basis.stirrups.size
+    steps.bind(
+        d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"),
+        d_b=sheet.lookup("d_b", BARS, bar.size),
+        A_b=sheet.lookup("A_b", BARS, bar.size),
+    )
+    steps.line(cover.COVER_TO_BARS)
+    if bar.place == "overhang":
+        each = bar.number / sides_of(designed.outline)
+        steps.line(minimum.SPREAD_WIDTH)
+        steps.bind(n_o=sheet.given("n_o", plain(each, ""), source="as laid"))
+        steps.line(development.CLEAR_OVERHANG)
+        return
+    steps.bind(
+        r_s=sheet.lookup("r_s", STIRRUP_BENDS, stirrup),
+        n_b=sheet.given("n_b", str(bar.number), source="the fullest layer that the bars pass"),
+    )
+    steps.line(bar_clause.CLEAR)
+
+
+def _record_factors(steps: Steps, designed: Designed, bar: Bar) -> None:
+    sheet, row = steps.sheet, OTHER_ROW
+    if bar.face == "top":
+        deep = steps.entry("h_f") if bar.place == "overhang" else steps.entry("h")
+        steps.line(development.FRESH_BELOW, h=deep)
+        row = TOP_ROW if steps.decide(development.TOP_BAR) else OTHER_ROW
+    steps.bind(
+        k_1=sheet.lookup("k_1", development.LOCATION, row),
+        k_2=sheet.lookup("k_2", development.COATING, "none"),
+        k_3=sheet.lookup("k_3", development.DENSITY, designed.strengths.density),
+        k_4=sheet.lookup("k_4", development.SIZE, bar.size),
+    )
+
+
+def _record_expressions(steps: Steps, designed: Designed, bar: Bar) -> None:
+    """Record both expressions, that in use as l_d0; bars in an overhang have the table alone."""
+    sheet = steps.sheet
+    by_general = designed.basis.expression == "general" and bar.place == "web"
+    if bar.place == "web":
+        sheet.note("expression", BY_GENERAL if by_general else BY_TABLE, title="Expression in use")
+        _record_general(steps, designed, "l_d0" if by_general else "l_d0g")
+    _record_table(steps, designed, bar, "l_d0t" if by_general else "l_d0")
+
+
+def _record_general(steps: Steps, designed: Designed, symbol: str) -> None:
+    sheet, stirrups = steps.sheet, designed.basis.stirrups
+    steps.lines(development.CENTRES, development.TO_SURFACE, development.D_CS)
+    spacing = sheet.given("s", plain(stirrups.spacing, "mm"), source="largest along the beam")
+    steps.bind(
+        n_v=sheet.given("n_v", str(stirrups.legs), source="as laid"),
+        A_bs=sheet.lookup("A_bs", BARS, stirrups.size, "A_b"),
+        s=spacing,
+        f_yt=steps.entry("f_y"),
+        n_d=steps.entry("n_b"),
+    )
+    steps.lines(development.A_TR, development.K_TR)
+    steps.line(development.GENERAL, symbol)
+
+
+def _record_table(steps: Steps, designed: Designed, bar: Bar, symbol: str) -> None:
+    covered = bool(steps.decide(development.COVERED))
+    if bar.place == "overhang":
+        apart = bool(steps.decide(development.SPACED_SLAB))
+    elif designed.basis.stirrups.minimum:
+        apart = bool(steps.decide(development.SPACED))
+    else:
+        apart = False
+        steps.sheet.note(
+            "no-minimum-stirrups",
+            "There are no minimum stirrups all along: the longer expression.",
+            title="Stirrups",
+            clause="12.2.3",
+        )
+    steps.line(development.SHORT if covered and apart else development.LONG, symbol)
+
+
+def record_compression(writers: Writers, lengths: Lengths, bar: Bar, key: str) -> Entry:
+    """Record the development length of bars that are counted in compression."""
+    with writers.sheet.part(key, f"Development in compression of {bar.face} bars {bar.size}"):
+        steps = Steps(writers.sheet, lengths[bar])
+        steps.line(development.COMPRESSION_BASIC)
+        return steps.line(development.COMPRESSION)
+
+
+def length_entry(writers: Writers, lengths: Lengths, run: BarRun) -> Entry:
+    """Return the recorded development length of a run."""
+    return lengths[key_of(writers.designed, run)]["l_d"]
+
+
+def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
+    """Record every kind of lap in a part: size, length against what is laid, room for concrete."""
+    designed, kept = writers.designed, tuple(runs)
+    pairs = [(a, b) for a in kept for b in kept if in_line(a, b)]
+    seen: dict[tuple[Bar, float], int] = {}
+    for first, second in pairs:
+        thin = min(first, second, key=lambda run: run.diameter)
+        same = (key_of(designed, thin), first.end - second.start)
+        if same not in seen:
+            seen[same] = len(seen) + 1
+            _record_lap(writers, lengths, thin, first, second, seen[same])
+
+
+def in_line(a: BarRun, b: BarRun) -> bool:
+    """Tell whether two runs of equal number are lapped, of one size or not."""
+    if alike(a, b):
+        return lapped(a, b)
+    kin = (a.face, a.layer, a.place, a.number) == (b.face, b.layer, b.place, b.number)
+    short = a.end - b.start <= 100 * max(a.diameter, b.diameter)
+    return kin and a.number == 2 and short and a.start < b.start < a.end < b.end  # noqa: PLR2004
+
+
+def _record_lap(
+    writers: Writers, lengths: Lengths, thin: BarRun, first: BarRun, second: BarRun, number: int
+) -> None:
+    sheet, designed = writers.sheet, writers.designed
+    other = (
+        f" with {second.size if thin is first else first.size}" if first.size != second.size else ""
+    )
+    with sheet.part(f"anchorage-lap-{number}", f"Lap of {first.face} bars {thin.size}{other}"):
+        place = lengths[key_of(designed, thin)]
+        steps = Steps(sheet, place)
+        sheet.note(
+            "class",
+            "Both bars are spliced at one place: class B, by the length of the thinner bars.",
+            title="Class of the lap",
+            clause="12.15.1",
+            basis=COMMON_PRACTICE,
+        )
+        steps.check(laps.LAPPABLE)
+        provided = sheet.given("l_lp", plain(first.end - second.start, "mm"), source="as laid")
+        steps.bind(l_lp=provided)
+        steps.check(laps.LONG_ENOUGH)
+        steps.line(bar_clause.LEAST_CLEAR)
+        pair = develop(designed.basis, key_of(designed, thin)).bar.number <= 2  # noqa: PLR2004
+        steps.line(laps.CLEAR_PAIR if pair else laps.CLEAR_CORNERS)
+        if not steps.decide(laps.ROOM):
+            sheet.note(
+                "one-above-the-other",
+                "Side by side there is no room: the lapped bars stand one above the other.",
+                title="Place of the lap",
+                basis=COMMON_PRACTICE,
+            )
+
+
+def record_hook(
+    writers: Writers, place: Mapping[str, Entry], support: int, size: str
+) -> dict[str, Entry]:
+    """Record inside the open part the hook of a bar at an end of the beam, with its checks.
+
+    Raises :class:`UserError` for an edition whose hooks cannot be calculated.
+    """
+    sheet, designed = writers.sheet, writers.designed
+    basic = hooks.basic_length(designed.pair)
+    steps = Steps(sheet, place)
+    steps.bind(
+        d_bs=sheet.lookup("d_bs", BARS, designed.basis.stirrups.size, "d_b"),
+        d_b=sheet.lookup("d_b", BARS, size),
+    )
+    breadth = designed.breadths.get(support, 0.0)
+    if breadth > designed.outline.b_w:
+        steps.bind(b_col=sheet.given("b_col", plain(breadth, "mm"), source="column"))
+        steps.line(hooks.SIDE_COVER_COLUMN)
+    else:
+        steps.line(hooks.SIDE_COVER)
+    steps.bind(c_tail=sheet.given("c_tail", plain(designed.end_cover, "mm"), source="as laid"))
+    steps.line(hooks.FACE_COVER)
+    side, tail = steps.decide(hooks.SIDE_COVERED), steps.decide(hooks.TAIL_COVERED)
+    face = steps.decide(hooks.FACE_COVERED)
+    tied = not (side and face)
+    reduced = bool(side and tail) and steps.holds(laps.LAPPABLE)
+    _record_hook_factors(steps, designed, reduced=reduced, tied=tied)
+    steps.lines(basic, hooks.L_DH)
+    if tied:
+        spacing = max(25.0, 3 * BARS.number(size, "d_b") // 25 * 25)
+        steps.bind(s_tie=sheet.given("s_tie", plain(spacing, "mm"), source="as laid"))
+        steps.check(hooks.TIED)
+    return steps.place
+
+
+def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, tied: bool) -> None:
+    sheet = steps.sheet
+    covered = "side cover 60 mm and tail cover 50 mm or more" if reduced else "less"
+    ties = "ties at 3 bar diameters or closer" if tied else "none"
+    steps.bind(
+        k_hc=sheet.lookup("k_hc", hooks.COVER_FACTORS, covered),
+        k_ht=sheet.lookup("k_ht", hooks.TIE_FACTORS, ties),
+        k_hd=sheet.lookup("k_hd", hooks.DENSITY_FACTORS, designed.strengths.density),
+        k_he=sheet.lookup("k_he", hooks.COATING_FACTORS, "none"),
+    )

@@ -1,0 +1,217 @@
+"""Recorded: every cut-off point, the bars into the supports, the top bars past inflection."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from lineproof.beams.continuous.anchorage import bar_of, develop
+from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
+from lineproof.beams.continuous.cutoff import (
+    Frame,
+    Point,
+    along,
+    full_moment,
+    local,
+    no_further_need,
+    zone_at,
+)
+from lineproof.beams.continuous.cutoff_ends import Runs, SideOf
+from lineproof.beams.continuous.cutoff_sets import (
+    begin,
+    grouped,
+    record_area,
+    record_resistance,
+    text_of,
+)
+from lineproof.beams.continuous.forces import Demand
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance_demand import stretch_at
+from lineproof.beams.flexure import required
+from lineproof.beams.steps import Steps
+from lineproof.formula import COMMON_PRACTICE
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import cutoff as clause
+
+
+@dataclass(frozen=True, eq=False)
+class Site:
+    """One side of a section of bars while it is recorded.
+
+    ``section`` holds A_s, d, d_v of all its bars; ``key`` and ``title`` are those of its parts.
+    """
+
+    writers: Writers
+    frame: Frame
+    lengths: Lengths
+    side: SideOf
+    section: dict[str, Entry]
+    key: str
+    title: str
+
+    def demand(self, t: float, row: int) -> Demand:
+        """Return the moment and shear of a case at a distance from the near axis."""
+        side = self.side
+        x = local(self.writers.designed, side.span, side.near, t)
+        return self.writers.designed.forces.demand(side.span, x, side.near, row)
+
+    def given(self, symbol: str, t: float, source: str = "as laid") -> Entry:
+        """Record a distance from the near axis."""
+        return self.writers.sheet.given(symbol, plain(t, "mm"), source=source)
+
+    def bar(self, run: BarRun) -> Mapping[str, Entry]:
+        """Return the recorded development of a run."""
+        return self.lengths[bar_of(self.writers.designed, run)]
+
+
+def record_cuts(site: Site) -> None:
+    """Record every cut-off of the bars of one side, a part each."""
+    for index in range(len(site.side.cuts)):
+        _record_cut(site, index)
+
+
+def point_of(frame: Frame, side: SideOf, index: int) -> Point | None:
+    """Return the point of no further need of a cut, by the bars that go on past it."""
+    M_r = full_moment(frame.designed, side.face, side.span, side.continuing(index))
+    return no_further_need(frame, side.face, side.span, side.near, M_r)
+
+
+def _record_cut(site: Site, index: int) -> None:
+    side, sheet = site.side, site.writers.sheet
+    ending, continuing = side.cuts[index], side.continuing(index)
+    key = f"{site.key}-cut-{index + 1}"
+    point = point_of(site.frame, side, index)
+    zone = zone_at(site.writers.designed, side.face, side.span, side.near, ending.t, continuing)
+    going = f"{text_of(continuing)} going on" if continuing else "none going on"
+    with sheet.part(key, f"{site.title}: {text_of(ending.runs)} cut, {going}"):
+        if point is None:
+            _note_no_point(site)
+        else:
+            _record_point(site, index, point)
+        if zone == "compression":
+            _note_compression(site, ending.t)
+    if zone == "double area":
+        _record_double_area(site, key, ending.t, continuing)
+    elif zone != "compression":
+        _record_low_shear(site, key, ending.t)
+
+
+def _record_point(site: Site, index: int, point: Point) -> None:
+    side, sheet = site.side, site.writers.sheet
+    ending, continuing = side.cuts[index], side.continuing(index)
+    steps = begin(site.writers, sheet, side.span, side.face)
+    record_area(steps, grouped(site.writers, continuing), "A_co")
+    record_resistance(steps, site.writers, side.face)
+    steps.bind(x_t=site.given("x_t", point.t, "found along the envelope; confirmed below"))
+    site.writers.forces(steps, site.demand(point.t, point.row), side.near, steps.entry("x_t"))
+    steps.check(clause.SUFFICES)
+    record_extension(site, steps, point.t, ending.t, ending.runs)
+    _record_continuing(site, steps, index)
+
+
+def record_extension(site: Site, steps: Steps, t_point: float, t: float, runs: Runs) -> Steps:
+    """Record the extension past a point and its check; by d and d_v of the whole section."""
+    designed, side = site.writers.designed, site.side
+    _record_angle(site, steps, along(designed, side.span, side.near, t_point))
+    past = Steps(site.writers.sheet, steps.place | site.section)
+    thick = max(runs, key=lambda run: run.diameter)
+    past.bind(x_e=site.given("x_e", t), d_b=site.bar(thick)["d_b"])
+    past.line(clause.EXTENSION)
+    past.line(clause.PAST_INWARD if side.face == "bottom" else clause.PAST_OUTWARD)
+    past.check(clause.EXTENDED)
+    return past
+
+
+def _record_angle(site: Site, steps: Steps, place: float) -> None:
+    """Bind theta: that of the shear design, 35 degrees where there is none."""
+    designed = site.writers.designed
+    stretch = stretch_at(designed, place)
+    if designed.shear:
+        site.writers.shear(steps, stretch)
+    else:
+        angle = site.writers.sheet.given("theta", plain(stretch.theta, "deg"), source="11.3.6.3")
+        steps.bind(theta=angle)
+
+
+def _record_continuing(site: Site, steps: Steps, index: int) -> None:
+    """Record the length that the continuing bars need past the point (12.10.4)."""
+    side, designed = site.side, site.writers.designed
+    if not side.continuing(index):
+        return
+    longest = max(
+        side.continuing(index), key=lambda r: develop(designed.basis, bar_of(designed, r)).l_d
+    )
+    past = Steps(site.writers.sheet, steps.place | site.section)
+    past.bind(**{name: site.bar(longest)[name] for name in ("d_b", "l_d")})
+    past.bind(x_co=site.given("x_co", side.t_continuing(index)))
+    past.line(clause.CONTINUING)
+    inward = side.face == "bottom"
+    past.line(clause.CONTINUING_INWARD if inward else clause.CONTINUING_OUTWARD)
+    past.check(clause.CONTINUES)
+
+
+def _note_no_point(site: Site) -> None:
+    text = "The bars that go on carry the moment alone along the whole span."
+    if site.side.face == "top":
+        text = "The bars that go on do not carry the moment alone, not even at midspan."
+    site.writers.sheet.note("no-point", text, title="Point of no further need", clause="12.10.3")
+
+
+def _note_compression(site: Site, t: float) -> None:
+    site.writers.sheet.note(
+        "compression-zone",
+        f"At {t:g} mm from the near support axis no load case puts the {site.side.face} in "
+        "tension: the bars end in the compression zone.",
+        title="End of the bars",
+        clause="12.10.5",
+        basis=COMMON_PRACTICE,
+    )
+
+
+def _rows_at(site: Site, t: float) -> tuple[int, int]:
+    """Return the cases of the largest moment of the face and of the largest shear at t."""
+    designed, side = site.writers.designed, site.side
+    M, V = designed.forces.pairs(side.span, local(designed, side.span, side.near, t))
+    return int((M if side.face == "bottom" else -M).argmax()), int(np.abs(V).argmax())
+
+
+def _record_low_shear(site: Site, key: str, t: float) -> None:
+    with site.writers.sheet.part(f"{key}-shear", f"{site.title}: end in the tension zone"):
+        steps = _at_end(site, t, _rows_at(site, t)[1])
+        if site.writers.designed.shear:
+            steps.check(clause.CUT_AT_LOW_SHEAR)
+        else:
+            _fail_without_shear(site)
+
+
+def _fail_without_shear(site: Site) -> None:
+    """Record a check that fails: without a shear design no bar may end in a tension zone."""
+    none = site.writers.sheet.given("V_r", "0 kN", source="no shear design")
+    site.writers.sheet.check(clause.CUT_AT_LOW_SHEAR, V_r=none)
+
+
+def _at_end(site: Site, t: float, row: int) -> Steps:
+    """Record inside the open part the forces of a case at an end of bars, and V_r there."""
+    side = site.side
+    steps = begin(site.writers, site.writers.sheet, side.span, side.face)
+    x = site.given("x_e", t)
+    site.writers.forces(steps, site.demand(t, row), side.near, x)
+    if site.writers.designed.shear:
+        place = along(site.writers.designed, side.span, side.near, t)
+        site.writers.shear(steps, stretch_at(site.writers.designed, place))
+    return steps
+
+
+def _record_double_area(site: Site, key: str, t: float, continuing: Sequence[BarRun]) -> None:
+    by_moment, by_shear = _rows_at(site, t)
+    with site.writers.sheet.part(f"{key}-shear", f"{site.title}: shear at the end"):
+        _at_end(site, t, by_shear).check(clause.CUT_AT_MODERATE_SHEAR)
+    with site.writers.sheet.part(f"{key}-area", f"{site.title}: steel at the end"):
+        steps = _at_end(site, t, by_moment)
+        A = record_area(steps, grouped(site.writers, continuing), "A_co")
+        steps.bind(A_co=A)
+        flanged = site.side.face == "bottom" and site.writers.designed.outline.h_f > 0
+        required(steps, site.writers.designed.outline.shape if flanged else "rectangular")
+        steps.check(clause.CUT_AT_DOUBLE_AREA)

@@ -1,0 +1,305 @@
+"""Recorded: sections of bars, bottom bars into supports and where the moment is zero, top bars."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+import numpy as np
+
+from lineproof.beams.bars import BarLayers, bars_text
+from lineproof.beams.continuous.anchorage import available, bar_of, develop
+from lineproof.beams.continuous.anchorage_record import Writers, plain, record_hook
+from lineproof.beams.continuous.cutoff import Point, half_of, local, no_further_need, support_of
+from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes
+from lineproof.beams.continuous.cutoff_record import Site, record_extension
+from lineproof.beams.continuous.cutoff_sets import (
+    Group,
+    begin,
+    grouped,
+    record_area,
+    record_developed,
+    record_resistance,
+    text_of,
+)
+from lineproof.beams.continuous.detailing_bottom import support_shear
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.resistance_demand import stretch_at
+from lineproof.beams.steps import Steps
+from lineproof.errors import UserError
+from lineproof.formula import COMMON_PRACTICE
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import cutoff as clause
+from lineproof.standards.a23_3 import development, hooks, shear, shear_bars
+
+Hooks = Mapping[tuple[int, str], Entry]
+"""Recorded development lengths of hooks by support number and bar size."""
+
+
+def record_section(
+    writers: Writers, layers: BarLayers, span: int, face: Face, stated: str
+) -> dict[str, Entry]:
+    """Record inside the open part the bars of a section: area, depth, effective shear depth."""
+    sheet = writers.sheet
+    sheet.note("bars-text", f"{stated}: {bars_text(layers)}.", title="Bars")
+    steps = begin(writers, sheet, span, face)
+    first = layers[0].size
+    groups = [Group(i, layer.size, layer.number, first) for i, layer in enumerate(layers, 1)]
+    record_area(steps, groups, "A_s")
+    steps.line(shear.D_V)
+    return steps.place
+
+
+def record_into_support(site: Site) -> None:
+    """Record that enough bottom bars run into a support, and far enough (12.11.1)."""
+    side, designed = site.side, site.writers.designed
+    support = support_of(side.span, side.near)
+    if not designed.held(support):
+        return
+    sheet = site.writers.sheet
+    simple = designed.exterior(support) and designed.outline.supports[support - 1].kind == "simple"
+    with sheet.part(site.key, f"{site.title} into support {support}"):
+        sheet.note("bars-text", f"Into the support: {text_of(side.kept) or 'none'}.", title="Bars")
+        if not side.kept:
+            _fail(site, clause.INTO_CONTINUOUS_SUPPORT, "A_se", "0 mm2")
+            return
+        steps = begin(site.writers, sheet, side.span, "bottom")
+        A_se = record_area(steps, grouped(site.writers, side.kept), "A_se", depth=False)
+        steps.bind(A_s=site.section["A_s"], A_se=A_se)
+        steps.check(clause.INTO_SIMPLE_SUPPORT if simple else clause.INTO_CONTINUOUS_SUPPORT)
+        if side.t_kept < -half_of(designed, side.span, side.near):
+            sheet.note("through", "The bars run through the support.", title="End of the bars")
+            return
+        width = designed.outline.supports[support - 1].width
+        steps.bind(
+            b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
+            x_e=site.given("x_e", side.t_kept),
+        )
+        steps.line(clause.IN_SUPPORT)
+        steps.check(clause.LENGTH_IN_SUPPORT)
+
+
+def _fail(site: Site, test: object, symbol: str, nothing: str) -> None:
+    """Record a check that fails for want of bars."""
+    none = site.writers.sheet.given(symbol, nothing, source="as laid")
+    site.writers.sheet.check(test, **{symbol: none, "A_s": site.section["A_s"]})  # type: ignore[arg-type]
+
+
+def record_zero_moment(site: Site, hooked: Hooks) -> None:
+    """Record 12.11.3 at a simple end support or at the point of inflection near a support."""
+    side, designed = site.side, site.writers.designed
+    support = support_of(side.span, side.near)
+    if not side.kept or not designed.held(support):
+        return
+    if designed.exterior(support) and designed.outline.supports[support - 1].kind == "simple":
+        _record_simple(site, support, hooked)
+        return
+    point = inflection(designed, side.span, side.near)
+    if point is None:
+        return
+    title = f"{site.title}: at the point of inflection near support {support}"
+    with site.writers.sheet.part(f"{site.key}-zero", title):
+        steps = _kept(site)
+        steps.bind(x_t=site.given("x_t", point.t, "point of inflection, found along the span"))
+        demand = site.demand(point.t, point.row)
+        site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
+        steps.bind(x_e=site.given("x_e", side.t_kept))
+        steps.line(clause.PAST_INWARD)
+        past = Steps(site.writers.sheet, steps.place | site.section)
+        past.bind(d_b=site.bar(_thickest(side.kept))["d_b"])
+        steps.bind(l_a=past.line(clause.PAST_INFLECTION))
+        steps.line(clause.LIMIT)
+        steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=_longest(site)["l_d"])
+
+
+def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
+    side, designed = site.side, site.writers.designed
+    sheet = site.writers.sheet
+    title = f"{site.title}: development at the simple support {support}"
+    with sheet.part(f"{site.key}-zero", title):
+        steps = _kept(site)
+        x = 0.0 if side.near == "left" else designed.outline.lengths[side.span - 1]
+        _, V = designed.forces.pairs(side.span, x, "right" if side.near == "left" else "left")
+        steps.bind(x_t=site.given("x_t", 0.0, "support axis"))
+        demand = site.demand(0.0, int(np.abs(V).argmax()))
+        site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
+        width = designed.outline.supports[support - 1].width
+        steps.bind(
+            b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
+            c_end=sheet.given("c_end", plain(designed.end_cover, "mm"), source="as laid"),
+        )
+        steps.line(clause.PAST_CENTRE)
+        _, confined = support_shear(designed, side.span, side.near)
+        steps.line(clause.LIMIT_CONFINED if confined else clause.LIMIT)
+        bent = [hooked[support, r.size] for r in side.kept if _hook(r, side.near)]
+        longest = max(bent, key=lambda e: e.value) if bent else _longest(site)["l_d"]
+        steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=longest)
+
+
+def _kept(site: Site) -> Steps:
+    """Record inside the open part the bars that run into the support and their resistance."""
+    steps = begin(site.writers, site.writers.sheet, site.side.span, site.side.face)
+    record_area(steps, grouped(site.writers, site.side.kept), "A_s")
+    record_resistance(steps, site.writers, site.side.face)
+    return steps
+
+
+def _thickest(runs: Runs) -> BarRun:
+    return max(runs, key=lambda run: run.diameter)
+
+
+def _longest(site: Site) -> Mapping[str, Entry]:
+    designed = site.writers.designed
+    return site.bar(
+        max(site.side.kept, key=lambda r: develop(designed.basis, bar_of(designed, r)).l_d)
+    )
+
+
+def _hook(run: BarRun, near: End) -> str:
+    return run.hook_start if near == "left" else run.hook_end
+
+
+def record_past_inflection(site: Site) -> None:
+    """Record how far the longest top bars pass the point of inflection (12.12.2)."""
+    side, designed = site.side, site.writers.designed
+    with site.writers.sheet.part(f"{site.key}-inflection", f"{site.title}: past the inflection"):
+        point = no_further_need(site.frame, "top", side.span, side.near, 0.0)
+        if passes(designed, side):
+            _note_through(site)
+        elif point is None:
+            _fail_inflection(site)
+        else:
+            _record_inflection(site, point)
+
+
+def _note_through(site: Site) -> None:
+    to = "to the free end" if site.writers.designed.cantilever(site.side.span) else "on"
+    site.writers.sheet.note(
+        "through",
+        f"{text_of(site.side.kept)} run {to}: they do not end near a point of inflection.",
+        title="End of the top bars",
+        basis=COMMON_PRACTICE,
+    )
+
+
+def _fail_inflection(site: Site) -> None:
+    """Record a check that fails: bars end although the top stays in tension up to midspan."""
+    sheet = site.writers.sheet
+    sheet.note(
+        "no-inflection",
+        "In some load case the top stays in tension up to midspan: the bars may not end before.",
+        title="Point of inflection",
+        clause="12.12.2",
+    )
+    none = sheet.given("l_ext", "0 mm", source="no point of inflection")
+    sheet.check(clause.LONG_PAST_INFLECTION, l_pi=site.section["d"], l_ext=none)
+
+
+def _record_inflection(site: Site, point: Point) -> None:
+    side, writers = site.side, site.writers
+    sheet = writers.sheet
+    case = writers.designed.forces.cases[point.row]
+    steps = Steps(sheet, site.section)
+    steps.bind(x_t=site.given("x_t", point.t, f"point of inflection, {case}"))
+    past = record_extension(site, steps, point.t, side.t_kept, side.kept)
+    past.line(clause.LENGTH_PAST_INFLECTION)
+    past.check(clause.LONG_PAST_INFLECTION)
+    A_pi = record_area(Steps(sheet, {}), grouped(writers, side.kept), "A_pi", depth=False)
+    past.bind(A_pi=A_pi, A_s=site.section["A_s"])
+    past.check(clause.TOP_PAST_INFLECTION)
+
+
+def record_hooks(writers: Writers, runs: Runs) -> Hooks:
+    """Record every kind of hook at the ends of the beam in a part, with whether it fits."""
+    made: dict[tuple[int, str], Entry] = {}
+    designed, sheet = writers.designed, writers.sheet
+    last = len(designed.outline.supports)
+    for support, name in ((1, "hook_start"), (last, "hook_end")):
+        for size in sorted({run.size for run in runs if getattr(run, name)}):
+            key = f"anchorage-end-{support}-hook-{size.lower()}"
+            with sheet.part(key, f"Hooks of bars {size} at support {support}"):
+                place = record_hook(writers, {}, support, size)
+                made[support, size] = place["l_dh"]
+                if designed.held(support):
+                    _record_fit(writers, Steps(sheet, place), support)
+    return made
+
+
+def _record_fit(writers: Writers, steps: Steps, support: int) -> None:
+    sheet, designed = writers.sheet, writers.designed
+    width = designed.outline.supports[support - 1].width
+    steps.bind(
+        b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
+        c_end=sheet.given("c_end", plain(designed.end_cover, "mm"), source="as laid"),
+    )
+    steps.line(hooks.AVAILABLE)
+    steps.check(hooks.FITS)
+
+
+def record_end_bottom(site: Site, hooked: Hooks) -> None:
+    """Record the force of 11.3.9.5 at the inner face of an end support and the bars there."""
+    side, writers = site.side, site.writers
+    sheet, designed = writers.sheet, writers.designed
+    support = support_of(side.span, side.near)
+    title = f"Bottom bars at the face of support {support}"
+    with sheet.part(f"anchorage-end-{support}-bottom", title):
+        steps = begin(writers, sheet, side.span, "bottom")
+        if support in designed.end_forces:
+            force = plain(designed.end_forces[support] / 1e3, "kN")
+            steps.bind(F_le=sheet.given("F_le", force, source="shear"))
+        else:
+            _record_end_force(site, steps)
+        l_av = available(designed, support)
+        rows = []
+        for run in side.kept:
+            needed = hooked[support, run.size] if _hook(run, side.near) else site.bar(run)["l_d"]
+            (group,) = grouped(writers, (run,))
+            rows.append((group, l_av, needed))
+        if not rows:
+            raise UserError(f"bars: no bottom bars reach support {support}; write bars that do")
+        record_developed(steps, rows)
+        steps.check(shear_bars.END_SUPPORT_HOLDS)
+
+
+def _record_end_force(site: Site, steps: Steps) -> None:
+    side, designed = site.side, site.writers.designed
+    t = half_of(designed, side.span, side.near)
+    x = local(designed, side.span, side.near, t)
+    _, V = designed.forces.pairs(side.span, x, "right" if side.near == "left" else "left")
+    row = int(np.abs(V).argmax())
+    demand = designed.forces.demand(side.span, x, "right" if side.near == "left" else "left", row)
+    steps.bind(x_f=site.writers.sheet.given("x_e", plain(t, "mm"), "face of the support"))
+    site.writers.forces(steps, demand, side.near, steps.entry("x_f"))
+    step = 1.0 if side.near == "left" else -1.0
+    place = designed.outline.axes[side.span - 1] + x + step
+    stretch = stretch_at(designed, place)
+    if designed.shear:
+        site.writers.shear(steps, stretch)
+    else:
+        steps.bind(
+            V_s=site.writers.sheet.given("V_s", "0 kN", source="no stirrups counted"),
+            theta=site.writers.sheet.given("theta", plain(stretch.theta, "deg"), source="11.3.6.3"),
+        )
+    steps.line(shear_bars.END_SUPPORT)
+
+
+def record_end_top(site: Site) -> None:
+    """Record straight top bars at an end support: developed at its face."""
+    side, writers = site.side, site.writers
+    sheet, designed = writers.sheet, writers.designed
+    support = support_of(side.span, side.near)
+    straight = [run for run in side.runs if not _hook(run, side.near)]
+    for number, size in enumerate(sorted({run.size for run in straight}), 1):
+        run = next(r for r in straight if r.size == size)
+        with sheet.part(
+            f"anchorage-end-{support}-top-{number}",
+            f"Top bars {size} at the face of support {support}",
+        ):
+            steps = Steps(sheet, dict(site.bar(run)))
+            width = designed.outline.supports[support - 1].width
+            steps.bind(
+                b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
+                c_end=sheet.given("c_end", plain(designed.end_cover, "mm"), source="as laid"),
+            )
+            steps.line(hooks.AVAILABLE)
+            steps.check(development.DEVELOPED)

@@ -1,0 +1,106 @@
+"""The bars that hold the stirrups between the top bars, and the string that they make with them."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+from lineproof.beams.continuous.cutoff import along, axis_of, ceil50, half_of, support_of
+from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.laps import lap_length
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import span_at
+
+
+def holder(designed: Designed, span: int, near: End, t: float) -> BarRun:
+    """Return the bars that hold the stirrups from one support's corner bars to beyond midspan."""
+    far = designed.outline.lengths[span - 1]
+    bare = BarRun("top", 1, CORNERS, designed.bars.holders, 0.0, 0.0, serves="holds the stirrups")
+    lap = _holder_lap(designed, span)
+    x = sorted(along(designed, span, near, at) for at in (t - lap, max(far, t + 2 * lap)))
+    return replace(bare, start=x[0], end=x[1])
+
+
+def _holder_lap(designed: Designed, span: int) -> float:
+    axes = designed.outline.axes
+    whole = BarRun("top", 1, CORNERS, designed.bars.holders, axes[span - 1] + 1, axes[span] - 1)
+    return lap_length(designed, whole)
+
+
+def with_holders(designed: Designed, corners: dict[int, BarRun]) -> list[BarRun]:
+    """Return corner bars and the bars that hold the stirrups between, from left to right."""
+    made: list[BarRun] = []
+    for span in range(1, len(designed.outline.lengths) + 1):
+        if span in corners:
+            made.append(corners[span])
+        if not designed.cantilever(span):
+            held = _between(designed, span, corners.get(span), corners.get(span + 1))
+            made += [held] if held is not None else []
+        elif span not in corners and span + 1 not in corners:
+            made.append(_bare(designed, span))
+    last = len(designed.outline.supports)
+    return [*made, corners[last]] if last in corners else made
+
+
+def _bare(designed: Designed, span: int) -> BarRun:
+    start, end = (
+        _outer(designed, span, near) if span in (1, len(designed.outline.lengths)) else 0.0
+        for near in SIDES
+    )
+    return BarRun("top", 1, CORNERS, designed.bars.holders, start, end, serves="holds the stirrups")
+
+
+def _outer(designed: Designed, span: int, near: End) -> float:
+    """Return where bars without top bars at a support start: its end cover, or its axis."""
+    support = support_of(span, near)
+    if support in (1, len(designed.outline.supports)):
+        t = designed.end_cover - half_of(designed, span, near)
+        return along(designed, span, near, t)
+    return axis_of(designed, span, near)
+
+
+def _between(
+    designed: Designed, span: int, left: BarRun | None, right: BarRun | None
+) -> BarRun | None:
+    """Return the bars that hold the stirrups of a span; None where the top bars meet."""
+    lap = _holder_lap(designed, span)
+    start = left.end if left else _outer(designed, span, "left")
+    end = right.start if right else _outer(designed, span, "right")
+    if left and right and end - start < 2 * lap:
+        return None
+    return BarRun(
+        "top", 1, CORNERS, designed.bars.holders, start - (lap if left else 0.0),
+        end + (lap if right else 0.0), serves="holds the stirrups",
+    )  # fmt: skip
+
+
+def joined(designed: Designed, string: list[BarRun]) -> list[BarRun]:
+    """Return the corner string: like bars made one, others lapped."""
+    made: list[BarRun] = []
+    for run in string:
+        if made and made[-1].size == run.size:
+            serves = _serving(made[-1].serves, run.serves)
+            made[-1] = replace(made[-1], end=run.end, hook_end=run.hook_end, serves=serves)
+        elif made:
+            made += _lapped(designed, made.pop(), run)
+        else:
+            made.append(run)
+    return made
+
+
+def _serving(first: str, second: str) -> str:
+    parts = [p for text in (first, second) for p in text.split(", ")]
+    return ", ".join(dict.fromkeys(parts))
+
+
+def _lapped(designed: Designed, before: BarRun, after: BarRun) -> list[BarRun]:
+    """Return two runs of different bars with the lap of the thinner between them."""
+    thin = min(before, after, key=lambda run: run.diameter)
+    span = span_at(designed.outline, (before.end + after.start) / 2)
+    lap = lap_length(designed, replace(thin, start=designed.outline.axes[span - 1] + 1))
+    short = lap - (before.end - after.start)
+    if short > 0:
+        before = replace(before, end=before.end + ceil50(short / 2))
+        after = replace(after, start=after.start - ceil50(short / 2))
+    return [before, after]

@@ -1,0 +1,81 @@
+"""Recorded: anchorage and detailing of all bars of a beam, part by part."""
+
+from __future__ import annotations
+
+from lineproof.beams.continuous.anchorage_record import (
+    Lengths,
+    Writers,
+    record_laps,
+    record_lengths,
+)
+from lineproof.beams.continuous.cutoff import Frame
+from lineproof.beams.continuous.cutoff_ends import Runs, bottom_side, top_side
+from lineproof.beams.continuous.cutoff_record import Site, record_cuts
+from lineproof.beams.continuous.cutoff_support import (
+    Hooks,
+    record_end_bottom,
+    record_end_top,
+    record_hooks,
+    record_into_support,
+    record_past_inflection,
+    record_section,
+    record_zero_moment,
+)
+from lineproof.beams.continuous.detailing_bottom import SIDES
+from lineproof.beams.continuous.resistance import top_layers
+
+
+def record_detailing(writers: Writers, runs: Runs) -> Lengths:
+    """Record development, hooks, cut-off points, bars into supports, laps; return the lengths.
+
+    Raises :class:`UserError` for hooks in an edition in which they cannot be calculated.
+    """
+    designed = writers.designed
+    frame = Frame.of(designed)
+    lengths = record_lengths(writers, runs)
+    hooked = record_hooks(writers, runs)
+    for span in range(1, len(designed.outline.lengths) + 1):
+        _record_bottom(writers, frame, lengths, hooked, runs, span)
+    for support in range(1, len(designed.outline.supports) + 1):
+        if designed.bars.top[support - 1].web:
+            _record_top(writers, frame, lengths, runs, support)
+    record_laps(writers, lengths, runs)
+    return lengths
+
+
+def _record_bottom(
+    writers: Writers, frame: Frame, lengths: Lengths, hooked: Hooks, runs: Runs, span: int
+) -> None:
+    designed = writers.designed
+    key, title = f"anchorage-bottom-{span}", f"Bottom bars of span {span}"
+    with writers.sheet.part(key, title):
+        layers = designed.bars.bottom[span - 1]
+        section = record_section(writers, layers, span, "bottom", title)
+    if designed.cantilever(span):
+        return
+    for near in SIDES:
+        side = bottom_side(designed, runs, span, near)
+        site = Site(writers, frame, lengths, side, section, f"{key}-{near}", title)
+        record_into_support(site)
+        record_zero_moment(site, hooked)
+        record_cuts(site)
+        if designed.exterior(span if near == "left" else span + 1):
+            record_end_bottom(site, hooked)
+
+
+def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, support: int) -> None:
+    designed = writers.designed
+    for towards in SIDES:
+        if not designed.forces.has_span(support, towards):
+            continue
+        side = top_side(designed, runs, support, towards)
+        key = f"anchorage-top-{support}-{towards}"
+        title = f"Top bars of support {support}, span {side.span}"
+        with writers.sheet.part(key, title):
+            layers = top_layers(designed, support)
+            section = record_section(writers, layers, side.span, "top", title)
+        site = Site(writers, frame, lengths, side, section, key, title)
+        record_past_inflection(site)
+        record_cuts(site)
+        if designed.exterior(support):
+            record_end_top(site)
