@@ -53,7 +53,7 @@ def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:
     ``ran`` holds the hashes of the cells run so far, by their counts. They stand in the metadata
     with the part's digest, so that a reader can tell outputs that are older than their cells.
     """
-    record = view.sheet.view(_up_to(view))
+    record = view.record()
     part = record["parts"][-1]
     data = part_bundle(record, part)
     note = {"part": part_digest(part), "cells": ran or []}
@@ -80,12 +80,6 @@ def part_digest(part: Mapping[str, Any]) -> str:
 def cell_hash(source: str) -> str:
     """Hash a cell's source, without white space at its ends."""
     return hashlib.sha256(source.strip().encode()).hexdigest()[:12]
-
-
-def _up_to(view: PartView) -> list[Any]:
-    parts = list(view.sheet.parts)
-    keys = [part.key for part in parts]
-    return parts[: keys.index(view.key) + 1]
 
 
 def _shell() -> Any:

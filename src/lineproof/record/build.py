@@ -43,13 +43,19 @@ def build(
     notation: Notation,
     scope: str,
     not_covered: Iterable[Mapping[str, str]],
+    numbers: Mapping[str, int] | None = None,
 ) -> dict[str, Any]:
-    """Return the record of a calculation as plain data, printed strings and digest included."""
+    """Return the record of a calculation as plain data, printed strings and digest included.
+
+    ``numbers`` are those of the parts by key, where some are left out; else they count from 1.
+    """
     parts = list(parts)
+    if numbers is None:
+        numbers = {part.key: n for n, part in enumerate(parts, 1)}
     wanted: dict[int, int] = {}
     for _ in range(MOST_PASSES):
         builder = _Builder(notation, wanted)
-        made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
+        made = [builder.part(part, str(numbers[part.key])) for part in parts]
         needed = {key: max(n, wanted.get(key, 0)) for key, n in builder.wanted.items()}
         if needed == wanted:
             break

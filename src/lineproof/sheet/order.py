@@ -19,6 +19,19 @@ def rests_on(entry: Entry) -> Iterator[Entry]:
             yield arg
 
 
+def behind(part: Part, parts: Mapping[str, Part]) -> list[Part]:
+    """Return the parts that a part rests on, near or far, and itself; in the order recorded."""
+    found = {part.key}
+    waiting = [part]
+    while waiting:
+        for entry in waiting.pop().entries.values():
+            for key in {arg.part.key for arg in rests_on(entry)} - found:
+                if key in parts:
+                    found.add(key)
+                    waiting.append(parts[key])
+    return [other for key, other in parts.items() if key in found]
+
+
 def in_order(parts: Mapping[str, Part]) -> list[Part]:
     """Return the parts so that each stands behind those it rests on, otherwise as first run.
 

@@ -17,7 +17,7 @@ from lineproof.record.build import build
 from lineproof.record.entry import CHECK, DECISION, GIVEN, LINE, LOOKUP
 from lineproof.record.sources import GivenSource, LookupSource
 from lineproof.sheet.finding import NOT_COMPUTED, Finding
-from lineproof.sheet.order import in_order, out_of_date
+from lineproof.sheet.order import behind, in_order, out_of_date
 from lineproof.sheet.own import own_criterion
 from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind
 from lineproof.sheet.parts import check_calc_id, check_key
@@ -30,6 +30,14 @@ class PartView:
 
     def __init__(self, sheet: Sheet, key: str) -> None:
         self.sheet, self.key = sheet, key
+
+    def record(self) -> dict[str, Any]:
+        """Return the record data of the part, last, behind those it rests on."""
+        parts = {part.key: part for part in self.sheet.parts}
+        numbers = {key: n for n, key in enumerate(parts, 1)}
+        own = parts[self.key]
+        before = [part for part in behind(own, parts) if part is not own]
+        return self.sheet.view([*before, own], numbers)
 
 
 class Sheet(Finding):
@@ -275,9 +283,15 @@ class Sheet(Finding):
         # Read as any other record: what could not be read back is refused here.
         return Record.from_data(self.view(in_order(self._parts)))
 
-    def view(self, parts: Iterable[Part]) -> dict[str, Any]:
-        """Return the record data of some parts, without the checks of :meth:`close`."""
+    def view(
+        self, parts: Iterable[Part], numbers: Mapping[str, int] | None = None
+    ) -> dict[str, Any]:
+        """Return the record data of some parts, without the checks of :meth:`close`.
+
+        ``numbers`` are those that the parts carry; else they count from 1.
+        """
         return build(
             parts, calc=self.calc, member=self.member, project=self.project, codes=self.codes,
             notation=self.notation, scope=self.scope, not_covered=self.not_covered,
+            numbers=numbers,
         )  # fmt: skip
