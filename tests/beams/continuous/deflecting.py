@@ -20,6 +20,8 @@ PROJECT = {"codes": {"pair": "NBC 2015 + A23.3-14"}}
 F_C, B_W, H, H_F, B_F = 32.0, 380.0, 620.0, 140.0, 1900.0
 E_C = 4500 * F_C**0.5
 F_R = 0.6 * F_C**0.5
+# Gross concrete that does not crack, rectangular: one EI all along.
+STIFF = {"f_r": 1e6, "b_w": 400.0, "h_f": 0.0, "h": 600.0, "I_g": 7.2e9, "y_b": 300.0}
 FLOOR = "floor, nothing attached that deflection damages"
 PARTITIONS = numbers.DAMAGED
 SYMBOLS = {"": ("M_m", "M_h1", "M_h2"), "left": ("M_h", "M_mb", "M_hb")}

@@ -13,6 +13,7 @@ from lineproof.beams.continuous.deflection_service import Point, service_moments
 from lineproof.beams.continuous.deflection_shapes import deflected_shapes
 
 from .deflecting import FLOOR, PARTITIONS, beam_of, section_of
+from .deflecting import STIFF as STIFF_SECTION
 
 # E 25000, gross 8e9, web 6e9, cracked 4e9, 3e9, 3.5e9 mm4; cracking at 60 and 50 kN.m.
 STIFF = curvature.Stiffness(25e3, 8e9, 6e9, 4e9, 3e9, 3.5e9, 60e6, 50e6)
@@ -114,9 +115,8 @@ def test_cantilever_hangs_from_its_root(free: str) -> None:
     if free == "right":
         lengths, kinds, span = lengths[::-1], kinds[::-1], 2
     beam = beam_of(lengths, kinds)
-    stiff = {"f_r": 1e6, "b_w": 400.0, "h_f": 0.0, "h": 600.0, "I_g": 7.2e9, "y_b": 300.0}
     behind = numbers.Behind(7000, dict.fromkeys(("dead", "sustained", "all"), 7.2e9))
-    section = section_of(beam, span, behind=behind, **stiff)
+    section = section_of(beam, span, behind=behind, **STIFF_SECTION)
     tip = 0.0 if free == "left" else 2500.0
     loads: list[Load] = [UniformLoad("D", span, 40), PointLoad("D", span, 30e3, abs(tip - 500))]
     service = service_moments(beam, loads, span)
