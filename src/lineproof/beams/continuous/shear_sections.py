@@ -217,6 +217,8 @@ def _values(check: SpanCheck, row: int, column: int) -> dict[str, float]:
     made = {name: float(v[name][row, column]) for name in names}
     made["beta"] = float(v["beta_plain" if plain else "beta"][row, column])
     made["theta"] = float(v["theta"][row, column])
+    if not v["counts"][row, column]:
+        made["T_f"] = float(v["T_all"][row, column])
     if plain:
         made["V_c"] = float(v["V_plain"][row, column])
     made |= {n: float(check.bars[n][row, column]) for n in ("V_s", "F_lt", "F_lc", "F_le")}

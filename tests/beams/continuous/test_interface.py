@@ -1,0 +1,94 @@
+"""Shear where flange and web meet: independent check 13, and the length by statics."""
+
+from __future__ import annotations
+
+import math
+
+import pytest
+
+from lineproof.beams.continuous.interface import (
+    SlabBars,
+    length_beside_sag,
+    read_slab_bars,
+    record_interface,
+    record_interface_top,
+)
+from lineproof.beams.steps import Steps
+from lineproof.errors import UserError
+from lineproof.sheet import Sheet
+
+from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
+from .shear_models import CHECKED, DEAD_ONLY, case_of, new_sheet, number, uniform
+
+
+def place(sheet: Sheet, **typed: str) -> Steps:
+    steps = Steps(sheet, {})
+    for name, text in typed.items():
+        steps.bind(**{name: sheet.given(name, text)})
+    return steps
+
+
+def test_independent_check_13() -> None:
+    """2 x 10M at 250 in 130 mm: rho_v 0.00615, sigma 2.46, 2.89 MPa; 284.65 kN: 1.152 MPa."""
+    sheet, slab = new_sheet(CHECKED), read_slab_bars("slab_bars", "2 x 10M at 250 mm")
+    with sheet.part("interface-1", "Flange and web of span 1"):
+        steps = place(sheet, A_s="2000 mm2", b="2150 mm", b_o="900 mm", h_f="130 mm")
+        record_interface(steps, slab, 1900.0, block_in_web=False)
+    made = sheet.close()
+    assert number(made, "interface-1/rho_v") == pytest.approx(0.00615, abs=5e-6)
+    assert number(made, "interface-1/sigma") == pytest.approx(2.46, abs=5e-3)
+    assert number(made, "interface-1/v_r") == pytest.approx(2.89, abs=5e-3)
+    assert number(made, "interface-1/F_o") == pytest.approx(284.65, abs=0.5)
+    assert sheet.entry("interface-1/v_f").value == pytest.approx(1.1524, abs=5e-5)
+    assert not list(faults(made.data))
+
+
+def test_block_in_the_web_and_bars_in_the_overhang() -> None:
+    """1088.6 x 300/600 = 544.3 kN; 3-15M in the overhang: 0.85 x 3 x 200 x 0.4 = 204 kN."""
+    sheet, slab = new_sheet(CHECKED), SlabBars(1, "10M", 250.0)
+    with sheet.part("interface-1", "Sagging"):
+        steps = place(sheet, C_f="1088.6 kN", b="900 mm", b_o="300 mm", b_w="300 mm", h_f="100 mm")
+        record_interface(steps, slab, 2000.0, block_in_web=True)
+    with sheet.part("interface-top-3", "Hogging"):
+        steps = place(sheet, n_o="3", h_f="100 mm")
+        steps.bind(A_b=sheet.given("A_bt", "200 mm2"))
+        record_interface_top(steps, slab, 1500.0)
+    made = sheet.close()
+    assert number(made, "interface-1/F_o") == pytest.approx(544.3, abs=1)
+    assert number(made, "interface-top-3/F_o") == pytest.approx(204, abs=0.5)
+
+
+def test_length_beside_the_largest_moment() -> None:
+    """One simple span of 6 m between faces: half of it; two spans, dead alone: 3/8 l to the end.
+
+    Two spans: M is largest at 3/8 l and zero at 3/4 l, so the length is 3/8 x 6 = 2.25 m less the
+    half width of the support at the end, 2.25 m at the other side.
+    """
+    one = case_of((6000.0,), uniform((6000.0,), 10, 0), width=0.0, combinations=DEAD_ONLY)
+    assert length_beside_sag(one.forces, 1) == pytest.approx(3000.0)
+    lengths = (6000.0, 6000.0)
+    two = case_of(lengths, uniform(lengths, 10, 0), width=400.0, combinations=DEAD_ONLY)
+    assert length_beside_sag(two.forces, 1) == pytest.approx(2050.0)
+    assert length_beside_sag(two.forces, 2) == pytest.approx(2050.0)
+    assert math.isclose(3 / 8 * 6000 - 200, 2050)
+
+
+@pytest.mark.parametrize(
+    ("text", "said"),
+    [
+        ("10M", "is not understood; write '10M at 250 mm'"),
+        ("12M at 250 mm", "12M"),
+        ("10M at 2 m", "a spacing outside 0 to 500 mm"),
+        ("10M at 250", "has no unit"),
+        ("5 x 10M at 250 mm", "is not understood"),
+    ],
+)
+def test_slab_bars_that_cannot_be_read(text: str, said: str) -> None:
+    with pytest.raises(UserError) as caught:
+        read_slab_bars("slab_bars", text)
+    assert said in str(caught.value)
+
+
+def test_slab_bars_as_typed() -> None:
+    assert read_slab_bars("slab_bars", "15m at 0.2 m") == SlabBars(1, "15M", 200.0)
+    assert str(SlabBars(1, "15M", 200.0)) == "15M at 200 mm"
