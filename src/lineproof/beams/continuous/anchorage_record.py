@@ -16,7 +16,7 @@ from lineproof.beams.continuous.anchorage import (
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import alike, lapped
+from lineproof.beams.continuous.resistance import in_line
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
@@ -226,15 +226,6 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         if same not in seen:
             seen[same] = len(seen) + 1
             _record_lap(writers, lengths, thin, first, second, seen[same])
-
-
-def in_line(a: BarRun, b: BarRun) -> bool:
-    """Tell whether two runs of equal number are lapped, of one size or not."""
-    if alike(a, b):
-        return lapped(a, b)
-    kin = (a.face, a.layer, a.place, a.number) == (b.face, b.layer, b.place, b.number)
-    short = a.end - b.start <= 100 * max(a.diameter, b.diameter)
-    return kin and a.number == 2 and short and a.start < b.start < a.end < b.end  # noqa: PLR2004
 
 
 def _record_lap(

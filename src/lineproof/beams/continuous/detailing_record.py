@@ -23,12 +23,16 @@ from lineproof.beams.continuous.cutoff_support import (
 )
 from lineproof.beams.continuous.detailing_bottom import SIDES
 from lineproof.beams.continuous.resistance import top_layers
+from lineproof.beams.continuous.resistance_cover import COUNT, Coverage
+from lineproof.beams.continuous.resistance_record import record_coverage
 
 
-def record_detailing(writers: Writers, runs: Runs) -> Lengths:
-    """Record development, hooks, cut-off points, bars into supports, laps; return the lengths.
+def record_detailing(writers: Writers, runs: Runs, count: int = COUNT) -> Coverage:
+    """Record development, hooks, cut-off points, bars into supports, laps and the coverage.
 
-    Raises :class:`UserError` for hooks in an edition in which they cannot be calculated.
+    The coverage is looked at in ``count`` stations a span, and returned. Raises
+    :class:`UserError` for hooks in an edition in which they cannot be calculated, and where no
+    bars count at all though a moment asks for them.
     """
     designed = writers.designed
     frame = Frame.of(designed)
@@ -40,7 +44,7 @@ def record_detailing(writers: Writers, runs: Runs) -> Lengths:
         if designed.bars.top[support - 1].web:
             _record_top(writers, frame, lengths, runs, support)
     record_laps(writers, lengths, runs)
-    return lengths
+    return record_coverage(writers, lengths, hooked, runs, count)
 
 
 def _record_bottom(

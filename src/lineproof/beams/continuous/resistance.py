@@ -21,6 +21,7 @@ from lineproof.standards.a23_3 import bars as bar_clause
 from lineproof.standards.a23_3 import shear
 from lineproof.standards.a23_3.bars import BARS
 
+PAIR = 2
 MOST_LAP = 100.0
 """Longest overlap of like bars that is a lap, in bar diameters: more are two sets of bars."""
 
@@ -63,6 +64,16 @@ def lapped(first: BarRun, second: BarRun) -> bool:
     if not (alike(first, second) and first.start < second.start < first.end < second.end):
         return False
     return first.end - second.start <= MOST_LAP * first.diameter
+
+
+def in_line(first: BarRun, second: BarRun) -> bool:
+    """Tell whether one run is lapped with the next, of one size or, two corner bars, of another."""
+    if alike(first, second):
+        return lapped(first, second)
+    a, b = ((r.face, r.layer, r.place, r.number) for r in (first, second))
+    most = MOST_LAP * max(first.diameter, second.diameter)
+    overlapping = first.start < second.start < first.end < second.end
+    return a == b and first.number == PAIR and overlapping and first.end - second.start <= most
 
 
 def distance_of(designed: Designed, run: BarRun) -> float:

@@ -77,10 +77,16 @@ class Gap:
 
 @dataclass(frozen=True, slots=True)
 class Coverage:
-    """The worst station of every face and span, and the gaps."""
+    """The worst station of every face and span, and the gaps.
+
+    ``by_moment`` and ``by_tension`` are those of the moment alone and of the tension with shear,
+    the latter between the faces of the supports.
+    """
 
     worst: Station
     stations: tuple[Station, ...]
+    by_moment: tuple[Station, ...]
+    by_tension: tuple[Station, ...]
     gaps: tuple[Gap, ...]
 
     @property
@@ -118,6 +124,7 @@ def covered(designed: Designed, runs: Iterable[BarRun], count: int = COUNT) -> C
     """Compare what every load case asks with the developed bars at ``count`` stations a span."""
     standing = stand(designed, runs)
     worst: list[Station] = []
+    each: tuple[list[Station], list[Station]] = ([], [])
     gaps: list[Gap] = []
     for span in range(1, len(designed.outline.lengths) + 1):
         demand = demand_of(designed, span, count)
@@ -126,20 +133,21 @@ def covered(designed: Designed, runs: Iterable[BarRun], count: int = COUNT) -> C
             ratio = ratios(demand.side(face), provided, yield_force(designed))
             worst.append(_station(designed, demand, face, provided, int(ratio.argmax())))
             gaps += _gaps(demand, face, ratio)
+            for found, values in zip(each, _apart(designed, demand, face, provided), strict=True):
+                found.append(_station(designed, demand, face, provided, int(values.argmax())))
     governing = max(worst, key=lambda s: s.ratio)
-    return Coverage(governing, tuple(worst), tuple(gaps))
+    return Coverage(governing, tuple(worst), tuple(each[0]), tuple(each[1]), tuple(gaps))
 
 
-def station_at(
-    designed: Designed, standing: Sequence[Standing], demand: SpanDemand, face: Face, index: int
-) -> Station:
-    """Return one station of a span's demand with what the bars carry there."""
-    x = demand.x[index : index + 1]
-    provided = provide(designed, standing, face, x, [demand.span])
-    one = Provided(
-        *(np.repeat(values, index + 1) for values in (provided.A, provided.d, provided.M_r))
-    )
-    return _station(designed, demand, face, one, index)
+def _apart(
+    designed: Designed, demand: SpanDemand, face: Face, provided: Provided
+) -> tuple[Floats, Floats]:
+    """Return the ratios of the moment and, between the faces, of the tension."""
+    side = demand.side(face)
+    tension = _ratios(side.F, provided.A * yield_force(designed))
+    start, end = designed.outline.faces(demand.span)
+    clear = (demand.x >= start) & (demand.x <= end)
+    return _ratios(side.M, provided.M_r), np.where(clear, tension, -1.0)
 
 
 def _station(

@@ -16,6 +16,7 @@ from numpy.typing import NDArray
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.detailing_data import THETA, Designed, ShearStretch
+from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.resistance import area_for, section_depth, shear_depth
 from lineproof.standards.a23_3 import shear_bars
@@ -25,6 +26,7 @@ Truths = NDArray[np.bool_]
 NO_SHEAR = ShearStretch(0.0, 0.0, 0.0, 0.0, THETA)
 NOTHING = 1e3
 """A moment [N.mm] or force [N, times 1 mm] that is none: round-off of the analysis."""
+ENDS: tuple[End, End] = ("left", "right")
 TIP = 50.0
 """Length of bars at a free end, inside the cover, in which nothing is asked of them [mm]."""
 
@@ -143,7 +145,7 @@ def _bottom(designed: Designed, span: int) -> tuple[float, float]:
     return d_v, cap_of(designed, "bottom", span, "left")
 
 
-def cap_of(designed: Designed, face: Face, span: int, end: str) -> float:
+def cap_of(designed: Designed, face: Face, span: int, end: End) -> float:
     """Return the tension that the largest moment of a face needs alone [N]."""
     support = span if end == "left" else span + 1
     d = section_depth(designed, face, span, support)
@@ -152,17 +154,25 @@ def cap_of(designed: Designed, face: Face, span: int, end: str) -> float:
     return s.phi_s * s.f_y * area_for(designed, largest(designed, face, span, end), d, b)
 
 
-def largest(designed: Designed, face: Face, span: int, end: str) -> float:
+def largest(designed: Designed, face: Face, span: int, end: End) -> float:
     """Return the largest moment of a face: of a span, of its half for the top; 0 for none."""
+    found = largest_at(designed, face, span, end)
+    return max(found.M if face == "bottom" else -found.M, 0.0)
+
+
+def largest_at(designed: Designed, face: Face, span: int, end: End) -> Demand:
+    """Return where and in which case that moment stands."""
     if face == "bottom":
-        return max(designed.forces.sag(span).M, 0.0)
+        return designed.forces.sag(span)
     left, right = designed.forces.beam.faces(span)
     middle = (left + right) / 2
     a, b = (left, middle) if end == "left" else (middle, right)
     if designed.cantilever(span):
         a, b = left, right
-    M, _ = designed.forces.along(span, np.linspace(a, b, 21))
-    return max(float(-M.min()), 0.0)
+    x = np.linspace(a, b, 21)
+    M, _ = designed.forces.along(span, x)
+    row, column = np.unravel_index(int(M.argmin()), M.shape)
+    return designed.forces.demand(span, float(x[column]), end, int(row))
 
 
 def _side(
@@ -182,7 +192,7 @@ def _top_side(
     middle = sum(designed.forces.beam.faces(span)) / 2
     first = local < middle
     d_v = [shear_depth(section_depth(designed, "top", span, j), h) for j in (span, span + 1)]
-    caps = [cap_of(designed, "top", span, end) for end in ("left", "right")]
+    caps = [cap_of(designed, "top", span, end) for end in ENDS]
     return _side(
         -M, extra, inside, np.where(first, d_v[0], d_v[1]), np.where(first, caps[0], caps[1])
     )

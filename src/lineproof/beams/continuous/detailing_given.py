@@ -1,0 +1,262 @@
+"""Bars given along a beam, as built or as a designer wants them: read, and checked as a whole."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Mapping, Sequence
+from itertools import pairwise
+from typing import Any, get_args
+
+from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, value
+from lineproof.beams.continuous.cutoff_ends import at_section
+from lineproof.beams.continuous.detailing_data import Basis, SectionBars, TopBars
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
+from lineproof.beams.continuous.resistance import in_line
+from lineproof.errors import FaultList, UserError
+from lineproof.quantity import echo, read_quantity
+from lineproof.standards.a23_3 import bars as bar_clause
+from lineproof.standards.a23_3.bars import BARS
+from lineproof.standards.codes import CodePair
+
+KEYS = ("face", "bars", "start", "end", "layer", "place", "hook_start", "hook_end", "serves")
+NEEDED = ("face", "bars", "start", "end")
+FACES, HOOKS, PLACES = get_args(Face), get_args(Hook), ("web", "overhang")
+LAYERS = (1, 2)
+EXAMPLE = (
+    "{'face': 'bottom', 'bars': '2-25M', 'start': '-0.15 m', 'end': '7.75 m'}, distances from the "
+    "axis of support 1"
+)
+_BARS = re.compile(r"\s*(\d{1,2})\s*-\s*(\d{2}M)\s*\Z", re.IGNORECASE)
+
+
+def read_given_runs(
+    rows: Sequence[Mapping[str, Any]],
+    basis: Basis,
+    pair: CodePair,
+    sections: SectionBars | None = None,
+) -> tuple[BarRun, ...]:
+    """Read runs of bars and check them against the beam, and against its sections if given.
+
+    A row is for example ``{"face": "bottom", "bars": "2-25M", "start": "-0.15 m", "end":
+    "7.75 m"}``, with ``layer`` 2, ``place`` ``overhang``, ``hook_start`` or ``hook_end`` ``90``
+    where they apply. Distances run from the axis of support 1. Raises :class:`UserError` with
+    every fault. Whether the bars carry the moments is for ``covered`` to say.
+    """
+    faults, made = FaultList(), []
+    if not rows:
+        faults.add(f"bar runs: none given; write for example {EXAMPLE}")
+    for number, row in enumerate(rows, start=1):
+        try:
+            made.append(_read_row(f"bar run {number}", row, basis.outline, pair))
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+    runs = tuple(made)
+    _check_layers(runs, basis, faults)
+    if sections is not None:
+        _check_sections(runs, basis.outline, sections, faults)
+    faults.raise_if_any()
+    return runs
+
+
+def _read_row(name: str, row: Mapping[str, Any], outline: BeamOutline, pair: CodePair) -> BarRun:
+    faults = FaultList()
+    if not isinstance(row, Mapping):
+        raise UserError(f"{name}: {echo(row)} is not a run of bars; write for example {EXAMPLE}")
+    for key in row:
+        if key not in KEYS:
+            faults.add(f"{name}: {echo(key)} is not known; write one of {', '.join(KEYS)}")
+    for key in NEEDED:
+        if key not in row:
+            faults.add(f"{name}: {key} is missing; write for example {EXAMPLE}")
+    faults.raise_if_any()
+    face = _choice(f"{name}, face", row["face"], FACES, faults)
+    place = _choice(f"{name}, place", row.get("place", "web"), PLACES, faults)
+    layer = _choice(f"{name}, layer", row.get("layer", 1), LAYERS, faults)
+    hooks = [_choice(f"{name}, {key}", str(row.get(key, "")), HOOKS, faults)
+             for key in ("hook_start", "hook_end")]  # fmt: skip
+    match = _BARS.match(str(row["bars"]))
+    if match is None or match[2].upper() not in BARS.rows or int(match[1]) < 1:
+        faults.add(f"{name}, bars: {echo(row['bars'])} is not understood; write '2-25M'")
+    ends = [_distance(f"{name}, {key}", row[key], faults) for key in ("start", "end")]
+    faults.raise_if_any()
+    assert match is not None  # noqa: S101 - refused above
+    run = BarRun(
+        face, layer, int(match[1]), match[2].upper(), ends[0], ends[1], place, hooks[0], hooks[1],
+        str(row.get("serves", "")),
+    )  # fmt: skip
+    _check_ends(name, run, outline, pair, faults)
+    faults.raise_if_any()
+    return run
+
+
+def _choice(name: str, given: Any, known: Sequence[Any], faults: FaultList) -> Any:
+    if given not in known:
+        shown = ", ".join(repr(item) for item in known)
+        faults.add(f"{name}: {echo(given)}; write one of {shown}")
+    return given
+
+
+def _distance(name: str, given: Any, faults: FaultList) -> float:
+    try:
+        return read_quantity(name, given, "mm").value
+    except UserError as error:
+        faults.take(error)
+        return 0.0
+
+
+def _check_ends(
+    name: str, run: BarRun, outline: BeamOutline, pair: CodePair, faults: FaultList
+) -> None:
+    low, high = outline.ends
+    if run.start >= run.end:
+        faults.add(
+            f"{name}: starts at {run.start:g} mm and ends at {run.end:g} mm; write start below end"
+        )
+    for key, x in (("start", run.start), ("end", run.end)):
+        if not low <= x <= high:
+            faults.add(
+                f"{name}, {key}: {x:g} mm is outside the beam, which goes from {low:g} to "
+                f"{high:g} mm; write a distance from the axis of support 1 inside it"
+            )
+    for key, hook, x in (
+        ("hook_start", run.hook_start, run.start), ("hook_end", run.hook_end, run.end),
+    ):  # fmt: skip
+        if hook and not _at_end(outline, key, x):
+            faults.add(
+                f"{name}, {key}: the bars end at {x:g} mm, not at an end support or a free end; "
+                f"write {key}='' or end the bars there"
+            )
+        if hook and pair.concrete == "CSA A23.3:24":
+            faults.add(
+                f"{name}, {key}: hooks cannot be calculated to {pair.concrete}, whose expression "
+                "is not known here; write straight bars"
+            )
+    if run.place == "overhang" and (run.face == "bottom" or not outline.h_f):
+        faults.add(f"{name}, place: there is no slab beside the {run.face} bars; write 'web'")
+
+
+def _at_end(outline: BeamOutline, key: str, x: float) -> bool:
+    """Tell whether a hook stands in the end support of its side, or at a free end."""
+    last = key == "hook_end"
+    axis, support = outline.axes[-1 if last else 0], outline.supports[-1 if last else 0]
+    reach = support.half if support.kind != "free" else outline.depths[-1 if last else 0]
+    return abs(x - axis) <= reach
+
+
+def _places(runs: Iterable[BarRun], outline: BeamOutline) -> list[float]:
+    """Return places between all ends of bars, where what stands there can be counted."""
+    ends = sorted({outline.ends[0], outline.ends[1], *(x for r in runs for x in (r.start, r.end))})
+    return [(a + b) / 2 for a, b in pairwise(ends)]
+
+
+def _check_layers(runs: tuple[BarRun, ...], basis: Basis, faults: FaultList) -> None:
+    """Refuse layers too full for the web; of two corner bars that are lapped one pair counts."""
+    told: set[tuple[str, int]] = set()
+    for x in _places(runs, basis.outline):
+        for face in FACES:
+            there = [r for r in at_section(runs, face, x) if r.place == "web"]
+            there = [r for r in there if not any(in_line(before, r) for before in there)]
+            for layer in sorted({r.layer for r in there}):
+                row = [r for r in there if r.layer == layer]
+                fault = _fault_of_layer(row, basis, x)
+                if fault and (face, layer) not in told:
+                    told.add((face, layer))
+                    faults.add(fault)
+
+
+def _fault_of_layer(row: list[BarRun], basis: Basis, x: float) -> str:
+    number = sum(r.number for r in row)
+    thick = max(row, key=lambda r: r.diameter)
+    where = f"{thick.face} bars, layer {thick.layer}, {x:.0f} mm from the axis of support 1"
+    if number < 2:  # noqa: PLR2004 - no distance between the bars
+        return ""
+    bar = Bar(thick.face, "web", thick.layer, thick.size, number, basis.outline.depths[0])
+    clear = clear_distance(basis, bar)
+    least = value(bar_clause.LEAST_CLEAR, d_b=thick.diameter, a_max=basis.strengths.a_max)
+    if not holds(bar_clause.FITS, s_min=least, s_c=clear):
+        return (
+            f"{where}: {number} bars up to {thick.size} stand side by side, {clear:.0f} mm apart, "
+            f"at least {least:.0f} mm; write fewer bars there, or a second layer"
+        )
+    return ""
+
+
+def _check_sections(
+    runs: tuple[BarRun, ...], outline: BeamOutline, sections: SectionBars, faults: FaultList
+) -> None:
+    """Refuse sections that name more bars than stand there."""
+    for span, layers in enumerate(sections.bottom, start=1):
+        middle = sum(outline.faces(span)) / 2
+        _check_section(f"span {span}", runs, "bottom", middle, layers, faults)
+    for support, top in enumerate(sections.top, start=1):
+        x = _inner(outline, support)
+        _check_section(f"support {support}", runs, "top", x, top.web, faults)
+
+
+def _inner(outline: BeamOutline, support: int) -> float:
+    """Return where the top bars of a support are counted: axis, or the inner face at an end."""
+    axis, half = outline.axes[support - 1], outline.supports[support - 1].half
+    if support == 1:
+        return axis + half
+    return axis - half if support == len(outline.supports) else axis
+
+
+def _check_section(
+    name: str, runs: tuple[BarRun, ...], face: Face, x: float, layers: BarLayers, faults: FaultList
+) -> None:
+    for number, layer in enumerate(layers, start=1):
+        there = [r for r in at_section(runs, face, x) if r.layer == number and r.place == "web"]
+        found = sum(r.area for r in there)
+        if found < layer.area * (1 - 1e-9):
+            shown = " + ".join(f"{r.number}-{r.size}" for r in there) or "none"
+            faults.add(
+                f"{name}: {layer} asked for in layer {number} of the {face} bars, but {shown} "
+                f"stand at {x:.0f} mm from the axis of support 1; write a run of bars that passes "
+                "there, or fewer bars for the section"
+            )
+
+
+def section_bars_of(runs: Iterable[BarRun], outline: BeamOutline, holders: str) -> SectionBars:
+    """Return the bars of every section as they stand in given runs.
+
+    Raises :class:`UserError` for sections without bottom bars and layers of two sizes.
+    """
+    kept, faults = tuple(runs), FaultList()
+    bottom = []
+    for span in range(1, len(outline.lengths) + 1):
+        middle = sum(outline.faces(span)) / 2
+        layers = _web_at(kept, "bottom", middle, f"span {span}", faults)
+        if not layers:
+            faults.add(
+                f"bar runs: no bottom bars stand at the middle of span {span}, {middle:.0f} mm "
+                "from the axis of support 1; write a run of bars that passes there"
+            )
+        bottom.append(layers)
+    top = []
+    for support, built in enumerate(outline.supports, start=1):
+        x = _inner(outline, support)
+        overhang = sum(r.number for r in at_section(kept, "top", x) if r.place == "overhang")
+        free = built.kind == "free"
+        web = () if free else _web_at(kept, "top", x, f"support {support}", faults)
+        top.append(TopBars(web, 0 if free else overhang))
+    faults.raise_if_any()
+    return SectionBars(tuple(bottom), tuple(top), holders)
+
+
+def _web_at(
+    runs: tuple[BarRun, ...], face: Face, x: float, name: str, faults: FaultList
+) -> BarLayers:
+    layers: list[BarLayer] = []
+    for layer in LAYERS:
+        row = [r for r in at_section(runs, face, x) if r.layer == layer and r.place == "web"]
+        sizes = sorted({r.size for r in row})
+        if len(sizes) > 1:
+            faults.add(
+                f"bar runs: {name}: {' and '.join(sizes)} stand in layer {layer} of the {face} "
+                f"bars; write one size a layer, such as {sizes[0]} for all"
+            )
+        if row:
+            layers.append(BarLayer(sum(r.number for r in row), row[0].size))
+    return tuple(layers)
