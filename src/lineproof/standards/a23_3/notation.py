@@ -263,6 +263,8 @@ _ROWS = (
     ("M_P", "M", "P", "", "addition to a moment for a point load, for deflections", "kN.m"),
     ("M_q", "M", "q", "", "moment at which uniform load gives the same deflection", "kN.m"),
     ("M_mb", "M", "m,b", "", "moment at midspan of the span behind, load of the stage", "kN.m"),
+    ("M_ho", "M", "ho", "", "hogging moment at the far support of the span behind", "kN.m"),
+    ("w_sb", "w", "sb", "", "specified load of the stage on the span behind", "kN/m"),
     ("M_hb", "M", "h,b", "", "hogging moment at the root in the span behind, stage", "kN.m"),
     ("P_s", "P", "s", "", "specified point load", "kN"),
     ("w_p", "w", "p", "", "specified load on part of the span", "kN/m"),

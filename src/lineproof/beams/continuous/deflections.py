@@ -1,0 +1,126 @@
+"""Deflections of every span: what stands on the sheet, handed to the record of deflections."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from lineproof.beams.continuous.deflection_local import LocalLoad
+from lineproof.beams.continuous.deflection_record import (
+    RecordedDeflection,
+    SpanEntries,
+    record_deflection,
+)
+from lineproof.beams.continuous.deflection_service import (
+    SHARES,
+    ServiceMoments,
+    free_end,
+    service_moments,
+    span_behind,
+    sustained_share,
+)
+from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.model import GIVEN, Model, SingleLoad
+from lineproof.beams.continuous.service import service_lines
+from lineproof.record import Entry
+
+SERVICE = "service"
+_SPAN = ("l", "l_n", "h", "I_g", "y_b")
+
+
+def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
+    """Record the deflections of every span; a cantilever after the span behind it."""
+    r_Ls = _record_share(model)
+    order = sorted(range(1, model.spans + 1), key=lambda k: (model.forces.beam.cantilever(k), k))
+    made = {}
+    wanted = {span_behind(model.forces.beam, k) for k in order if model.forces.beam.cantilever(k)}
+    for span in order:
+        service = service_of(model, span)
+        entries = _entries_of(model, span, r_Ls)
+        made[span] = record_deflection(
+            model.sheet,
+            entries,
+            service_lines(model, service, entries.behind),
+            carries=model.inputs.carries,
+            lifting=service.lifting,
+            arrangement=service.arrangement,
+            calculate=span in wanted,
+        )
+    return made
+
+
+def shares_of(model: Model) -> dict[str, float]:
+    """Return the sustained part of every load type."""
+    typed = model.inputs.sustained
+    share = float(sustained_share(model.inputs.use)[0]) if typed is None else typed.value
+    return {**SHARES, "L": share, "L_st": share}
+
+
+def service_of(model: Model, span: int) -> ServiceMoments:
+    """Return the service moments of a span, live load where it deflects it most."""
+    return service_moments(
+        model.forces.beam, model.forces.loads, span, shares=shares_of(model),
+        solution=model.forces.solution,
+    )  # fmt: skip
+
+
+def _record_share(model: Model) -> Entry:
+    """Record the share of the live load that is sustained, given or assumed."""
+    typed = model.inputs.sustained
+    share, said = sustained_share(model.inputs.use)
+    with model.sheet.part(SERVICE, "Service loads for deflections"):
+        if typed is not None:
+            return model.sheet.given("r_Ls", typed, source="given")
+        return model.sheet.given("r_Ls", share, source=said)
+
+
+def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
+    sheet, beam = model.sheet, model.forces.beam
+    place = span_place(sheet, model.inputs, span)
+    free = free_end(beam, span)
+    behind = span_behind(beam, span) if free else None
+    midspan = None
+    if not free:
+        sag = sheet.entries_of(f"sag-{span}")
+        midspan = {
+            "b": place.get("b_f", sheet.entry(f"{GIVEN}/b_w")), "d": sag["d"], "A_s": sag["A_s"],
+        }  # fmt: skip
+    return SpanEntries(
+        span,
+        {name: place[name] for name in _SPAN},
+        midspan,
+        _top_at(model, span, "right"),
+        _top_at(model, span + 1, "left"),
+        free,
+        behind,
+        None if behind is None else model.lengths[behind - 1],
+        tuple(_local(load, r_Ls) for load in model.on_span(span)),
+        () if behind is None else tuple(_local(load, r_Ls) for load in model.on_span(behind)),
+    )
+
+
+def _top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
+    """Return d and A_s of the top bars at a continuous end; None at a simple or free end."""
+    kind = model.inputs.supports[support - 1].kind
+    exterior = support in (1, model.spans + 1)
+    if kind == "free" or (kind == "simple" and exterior):
+        return None
+    for each in (side, "left", "right"):
+        found = [p for p in model.sheet.parts if p.key == f"hog-{support}-{each}"]
+        if found and "A_s" in found[0].entries:
+            return {name: found[0].entries[name] for name in ("d", "A_s")}
+    return None
+
+
+def _local(load: SingleLoad, r_Ls: Entry) -> LocalLoad:
+    """Return a single load as the record of deflections takes it."""
+    names = {"P_s": load.size, "x_P": load.at}
+    if load.at is None:
+        names = {"w_p": load.size, "x_1": load.start, "x_2": load.end}
+    bound = {name: entry for name, entry in names.items() if entry is not None}
+    live = load.kind != "D"
+    return LocalLoad(bound, live, r_Ls if load.kind in ("L", "L_st") else None)
+
+
+def part_keys(sheet_parts: list[str]) -> list[str]:
+    """Return the keys of the parts of deflections among these."""
+    return [key for key in sheet_parts if key == SERVICE or key.startswith("deflection-")]

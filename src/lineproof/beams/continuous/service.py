@@ -1,0 +1,135 @@
+"""Service moments of a span as lines: sums of the support moments by load type, and statics.
+
+For the deflections: hogging moments at the axes of the supports are positive here.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from lineproof.beams.analysis.arrangements import LIVE
+from lineproof.beams.analysis.solve import Row
+from lineproof.beams.continuous.case_forces import factor_text
+from lineproof.beams.continuous.deflection_record import WORDS, Moments
+from lineproof.beams.continuous.deflection_service import ServiceMoments, Stage
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.groups import Group, moment_name, named
+from lineproof.beams.continuous.model import ANALYSIS, Model, SingleLoad
+from lineproof.beams.continuous.symbols import code, stated
+from lineproof.beams.steps import Steps
+from lineproof.record import Entry
+
+Factors = Mapping[Row, float]
+
+
+def service_lines(model: Model, service: ServiceMoments, behind: int | None) -> Moments:
+    """Return what records the moments of a stage: of the span, or of a cantilever's root.
+
+    ``behind`` is the span behind a cantilever, whose moments count as well.
+    """
+
+    def record(steps: Steps, stage: Stage) -> None:
+        span, factors = service.span, service.factors[stage]
+        if not service.free:
+            _Lines(steps, model, factors, stage, span).record_span("M_h1", "M_h2", "M_m", "w_s")
+            return
+        root: End = "right" if service.free == "left" else "left"
+        _Lines(steps, model, factors, stage, span).record_end(root, "M_h", "at the root")
+        if behind is not None:
+            lines = _Lines(steps, model, factors, stage, behind)
+            lines.record_behind("left" if service.free == "left" else "right")
+
+    return record
+
+
+class _Lines:
+    """The moments of one stage on one span."""
+
+    def __init__(
+        self, steps: Steps, model: Model, factors: Factors, stage: Stage, span: int
+    ) -> None:
+        self.steps, self.model, self.span, self.words = steps, model, span, WORDS[stage]
+        self.on_span = {kind: f for (kind, k), f in factors.items() if k == span and f}
+        self.by_group = {
+            Group(kind, k if kind in LIVE else 0): f for (kind, k), f in factors.items() if f
+        }
+        self.names: dict[str, Entry] = {"l": model.lengths[span - 1]}
+
+    def _line(self, text: str, unit: str, title: str) -> Entry:
+        made = self.steps.sheet.line(
+            stated(text, unit=unit), title=f"{title}, {self.words}", **named(self.names, text)
+        )
+        self.names[made.symbol] = made
+        self.steps.bind(**{made.symbol: made})
+        return made
+
+    def record_end(self, end: End, symbol: str, where: str) -> None:
+        """Record the hogging moment at one axis."""
+        entries = self.model.sheet.entries_of(ANALYSIS)
+        terms = []
+        for group, factor in self.by_group.items():
+            name = moment_name(self.model, group, self.span, end)
+            if name:
+                self.names[name] = entries[name]
+                terms.append(_times(factor, name))
+        text = f"-({' + '.join(terms)})" if terms else "0*w_s*l**2"
+        self._line(f"{symbol} = {text}", "kN.m", f"Hogging moment {where}")
+
+    def record_span(self, left: str, right: str, middle: str, load: str) -> None:
+        """Record load, hogging moments at both axes and the moment at midspan."""
+        self._record_load(load)
+        ends = []
+        sides: tuple[tuple[End, str], ...] = (("left", left), ("right", right))
+        for end, symbol in sides:
+            if self._any(end):
+                self.record_end(end, symbol, f"at the {end} support")
+                ends.append(symbol)
+        terms = [f"{load}*l**2/8"] if load in self.names else []
+        terms += [self._at_middle(load_) for load_ in self._single()]
+        terms += [f"-({' + '.join(ends)})/2"] if ends else []
+        text = f"{middle} = {' + '.join(terms)}".replace("+ -", "- ")
+        self._line(text, "kN.m", "Moment at midspan")
+
+    def record_behind(self, free: End) -> None:
+        """Record moments of the span behind a cantilever: at midspan and at the root."""
+        root: End = free
+        names = {root: "M_hb", ("right" if root == "left" else "left"): "M_ho"}
+        self.record_span(names["left"], names["right"], "M_mb", "w_sb")
+
+    def _any(self, end: End) -> bool:
+        return any(moment_name(self.model, g, self.span, end) for g in self.by_group)
+
+    def _record_load(self, symbol: str) -> None:
+        terms = []
+        for kind, factor in self.on_span.items():
+            if (kind, self.span) in self.model.uniform:
+                name = f"w_{code(kind)}{self.span}"
+                self.names[name] = self.model.uniform[kind, self.span]
+                terms.append(_times(factor, name))
+        if terms:
+            self._line(f"{symbol} = {' + '.join(terms)}", "kN/m", f"Load on span {self.span}")
+
+    def _single(self) -> list[SingleLoad]:
+        return [load for load in self.model.on_span(self.span) if load.kind in self.on_span]
+
+    def _at_middle(self, load: SingleLoad) -> str:
+        """Return what a single load gives at midspan of the simple span."""
+        n, factor = load.number, factor_text(self.on_span[load.kind])
+        self.names |= load.entries
+        half = self.model.lengths[self.span - 1].value / 2
+        if load.at is not None:
+            arm = f"a_x{n}" if load.at.value <= half else f"(l - a_x{n})"
+            return f"{factor}*P_x{n}*{arm}/2"
+        if load.start is None or load.end is None:
+            msg = f"load {n} has no place"
+            raise ValueError(msg)
+        s, e, w = f"s_x{n}", f"e_x{n}", f"{factor}*w_x{n}"
+        if load.end.value <= half:
+            return f"{w}*({e} - {s})*({s} + {e})/4"
+        if load.start.value >= half:
+            return f"{w}*({e} - {s})*(l - ({s} + {e})/2)/2"
+        return f"{w}*(({e} - {s})*(l - ({s} + {e})/2)/2 - (l/2 - {s})**2/2)"
+
+
+def _times(factor: float, name: str) -> str:
+    return name if factor == 1 else f"{factor_text(factor)}*{name}"
