@@ -123,7 +123,7 @@ def record(
     for section in (each for row in choice.sections for each in row):
         with sheet.part(section.key, section.title):
             steps = Steps(sheet, alike | place_of(sheet, case, section) | dict(more(section)))
-            x_f = record_place(steps, section, "as given")
+            x_f = record_place(steps, section)
             assert abs(x_f.value - section.distance) <= 1e-9 * section.distance
             given = sheet.given
             steps.bind(

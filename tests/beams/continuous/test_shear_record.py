@@ -103,6 +103,7 @@ def test_a_large_point_load_near_the_support(P: float, at_face: bool) -> None:  
     found, printed = section(choice, "shear-1-left"), entries(record, "shear-1-left")
     assert found.place == ("face" if at_face else "d_v")
     assert printed["near-point-loads"]["holds"] is not at_face
+    assert found.near_loads == f"1.4 x {P / 1e3:g} kN (D)"
     assert section(choice, "shear-1-right").V_pl == 0
 
 

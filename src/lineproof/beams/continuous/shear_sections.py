@@ -11,6 +11,7 @@ import numpy as np
 from lineproof.beams.continuous.forces import Demand, End, Forces
 from lineproof.beams.continuous.shear_check import SpanCheck, Spot, at_bearing
 from lineproof.beams.continuous.shear_numbers import SpanEnd
+from lineproof.beams.continuous.shear_state import loads_near
 
 Place = Literal["d_v", "face", "station"]
 _MORE = 1 + 1e-9
@@ -24,12 +25,13 @@ class ShearSection:
     """One section to be printed, with the numbers it was chosen by.
 
     ``end`` is the nearer support, ``distance`` [mm] is from its axis. ``place`` tells how it was
-    found: at d_v from the face, at the face (``reason`` says why), or along the span. ``tension``
-    is the face in tension; ``mixed``: the moment changes sign near the section, so that ``d`` is
-    the smaller of both faces. ``A_s`` lies on the face in tension, ``A_sp`` on the other.
-    ``torques`` holds load type, torque per length and factor of the case where a torque acts.
-    ``cap`` is the area for the largest moment alone where it limits the force in the bars.
-    ``values`` holds V_s, V_r, F_lt and the like by symbol, ``use`` demand over resistance.
+    found: at d_v from the face, at the face (``reason`` says why), or along the span. V_pl and
+    ``near_loads`` are the point loads within d_v. ``tension`` is the face in tension; ``mixed``:
+    the moment changes sign near the section, so that ``d`` is the smaller of both faces. ``A_s``
+    lies on the face in tension, ``A_sp`` on the other. ``torques`` holds load type, torque per
+    length and factor of the case where a torque acts. ``cap`` is the area for the largest moment
+    alone where it limits the force in the bars. ``values`` holds V_s, V_r, F_lt and the like by
+    symbol, ``use`` demand over resistance.
     """
 
     key: str
@@ -41,6 +43,7 @@ class ShearSection:
     place: Place
     reason: str
     V_pl: float
+    near_loads: str
     tension: Literal["bottom", "top"]
     mixed: bool
     d: float
@@ -160,6 +163,7 @@ def _section(
         place=place,
         reason=reason,
         V_pl=float(critical.V_pl[row]) if at_end else 0.0,
+        near_loads=_near_loads(check, forces, end, row, column) if at_end else "",
         tension="bottom" if bottom else "top",
         mixed=at_end and bool(critical.mixed[row]),
         d=float(v["d"][row, column]),
@@ -178,6 +182,19 @@ def _section(
             "spacing": float(check.spacing[row, column]),
             **{n: float(check.bars[n][row, column]) for n in ("tension", "compression", "bearing")},
         },
+    )
+
+
+def _near_loads(check: SpanCheck, forces: Forces, end: End, row: int, column: int) -> str:
+    """Write the point loads within d_v of a face with their factors: ``1.25 x 60 kN (D)``."""
+    state = check.state
+    face = state.faces[0] if end == "left" else state.faces[1]
+    factors = forces.factors_of(row)
+    d_v = float(state.v["d_v"][row, column])
+    return " + ".join(
+        f"{factors[load.kind, load.span]:.12g} x {size / 1000:.6g} kN ({load.kind})"
+        for load, size in loads_near(forces, state.numbers.span, end, face, d_v)
+        if (load.kind, load.span) in factors
     )
 
 
