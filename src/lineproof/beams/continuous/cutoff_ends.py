@@ -11,7 +11,7 @@ from lineproof.beams.continuous.cutoff import distance, far_face, half_of, local
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import lapped
+from lineproof.beams.continuous.resistance import alike, in_line, lapped
 from lineproof.beams.continuous.resistance_demand import NOTHING
 
 Runs = tuple[BarRun, ...]
@@ -70,13 +70,25 @@ def tip(run: BarRun, towards: End) -> float:
 
 
 def at_section(runs: Iterable[BarRun], face: Face, x: float) -> Runs:
-    """Return the bars of a face that stand at a place; of two that are lapped there, the first."""
+    """Return the bars of a face that stand at a place; of two that are lapped there, one.
+
+    Of like bars it is the first, of others the one whose end in the lap is further away.
+    """
     there = [
         run
         for run in runs
         if run.face == face and run.place != "side face" and run.start < x < run.end
     ]
-    return tuple(run for run in there if not any(lapped(before, run) for before in there))
+    return tuple(run for run in there if not any(_beside(run, other, x) for other in there))
+
+
+def _beside(run: BarRun, mate: BarRun, x: float) -> bool:
+    """Tell whether a run only accompanies another one, with which it is lapped, at a place."""
+    if alike(run, mate):
+        return lapped(mate, run)
+    if in_line(mate, run):
+        return x - run.start < mate.end - x
+    return in_line(run, mate) and run.end - x < x - mate.start
 
 
 def bottom_side(designed: Designed, runs: Runs, span: int, near: End) -> SideOf:
