@@ -7,8 +7,9 @@ with either sign.
 
 Checked before anything is used, all faults at once: every load case has the same stations, both
 ends of every span among them and none too far from the next; M is the same on both sides of a
-station; between two stations M changes by the mean of V times the distance, which is exact where
-the load is uniform; a reaction is the jump of V over its support.
+station; between two stations, and from the left end of the span to every station, M changes by the
+mean of V times the distance, which is exact where the load is uniform; a reaction is the jump of V
+over its support.
 """
 
 from __future__ import annotations
@@ -21,11 +22,15 @@ from itertools import pairwise
 from pathlib import Path
 
 import numpy as np
+from numpy.typing import NDArray
 
 from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.csv_table import Column, Line, ManyFaults, read_table
 from lineproof.beams.analysis.curves import Floats, Side
 from lineproof.beams.analysis.envelope import Envelope, Station
+
+Lines = NDArray[np.int64]
+"""Line numbers of a file."""
 
 FORCES = (
     Column("span", "count"),
@@ -63,10 +68,14 @@ class Ordinate:
 
 @dataclass(frozen=True, eq=False, slots=True)
 class Imported:
-    """The pairs M-V as an envelope, with the torsion of the same cases (cases, stations) [N.mm]."""
+    """The pairs M-V as an envelope, with the torsion of the same cases (cases, stations) [N.mm].
+
+    ``lines`` are the lines of the file that they stand on (cases, stations).
+    """
 
     envelope: Envelope
     T: Floats
+    lines: Lines
 
 
 Table = Mapping[LoadCase, Mapping[int, Sequence[Ordinate]]]
@@ -156,9 +165,18 @@ def _check_statics(
 ) -> None:
     moment = max((abs(row.M) for row in rows), default=0.0)
     shear = max((abs(row.V) for row in rows), default=0.0)
+    total, found = 0.0, len(faults.faults)
+    drift = ""
     for a, b in pairwise(rows):
         distance = b.x - a.x
         gained = (a.V + b.V) / 2 * distance
+        total += gained
+        if not drift and _drifts(rows[0], b, total, tolerance, (moment, shear)):
+            drift = (
+                f"{where}, 0 to {b.x / 1000:g} m: M changes by {(b.M - rows[0].M) / 1e6:g} kN.m, "
+                f"but V gives {total / 1e6:g} kN.m over that length (lines {rows[0].line} to "
+                f"{b.line}); look at signs and units, and write more decimals"
+            )
         slack = tolerance * max(moment, shear * distance)
         if abs(b.M - a.M - gained) <= slack:
             continue
@@ -173,6 +191,21 @@ def _check_statics(
                 f"{(b.M - a.M) / 1e6:g} kN.m, but V gives {gained / 1e6:g} kN.m (lines {a.line}, "
                 f"{b.line}); look at signs and units, and give a load between them its own station"
             )
+    if drift and len(faults.faults) == found:
+        faults.add(drift)
+
+
+def _drifts(
+    first: Ordinate,
+    last: Ordinate,
+    gained: float,
+    tolerance: float,
+    largest: tuple[float, float],
+) -> bool:
+    """Tell whether gaps that may each pass have added up; ``largest`` M and V of the span."""
+    moment, shear = largest
+    slack = tolerance * max(moment, shear * (last.x - first.x))
+    return abs(last.M - first.M - gained) > slack
 
 
 def _check_alike(table: Table, lengths: Sequence[float], faults: ManyFaults) -> None:
@@ -213,7 +246,8 @@ def _imported(table: Table, lengths: Sequence[float]) -> Imported:
     )
     rows = [[row for n in numbers for row in table[case][n]] for case in cases]
     M, V, T = (np.array([[getattr(row, what) for row in line] for line in rows]) for what in "MVT")
-    return Imported(Envelope(stations, cases, M, V), T)
+    lines = np.array([[row.line for row in line] for line in rows])
+    return Imported(Envelope(stations, cases, M, V), T, lines)
 
 
 def read_reactions(

@@ -12,6 +12,7 @@ from lineproof.beams.continuous.bar_choice import Chosen, TopBars
 from lineproof.beams.continuous.coefficients import COEFFICIENTS, record_coefficients
 from lineproof.beams.continuous.cover import record_cover
 from lineproof.beams.continuous.geometry import record_spans
+from lineproof.beams.continuous.imported_record import not_covered, record_imported_analysis
 from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
 from lineproof.beams.continuous.model import (
     ANALYSIS,
@@ -56,7 +57,13 @@ class ContinuousBeam:
         record_spans(self.sheet, self.inputs)
 
     def analysis(self) -> None:
-        """Record support moments and reactions by load type, and the coefficients beside."""
+        """Record support moments and reactions by load type, and the coefficients beside.
+
+        With ``forces_csv``, what was brought in and checked instead.
+        """
+        if self.inputs.forces_file is not None:
+            record_imported_analysis(self.model)
+            return
         record_analysis(self.model)
         if self.model.spans > 1:
             record_coefficients(self.model)
@@ -132,6 +139,8 @@ def continuous_beam(
     carries: str = "roof or floor with parts attached that deflection damages",
     sustained: QuantityInput | None = None,
     redistribution: Mapping[int, float] | None = None,
+    forces_csv: str | None = None,
+    reactions_csv: str | None = None,
     web_openings: str = "none",
 ) -> ContinuousBeam:
     """Start a beam of one or more spans: check all inputs, record them and the materials.
@@ -141,7 +150,10 @@ def continuous_beam(
     ``'free'`` at the end of a cantilever. ``columns`` holds, by number of the support, the columns
     below and above that hold the beam elastically. ``loads`` are those beside the floor:
     ``{'type': 'L', 'span': 2, 'point': '40 kN', 'at': '3.1 m', 'what': 'beam B12'}``. Bars left
-    out are chosen. Raises :class:`UserError` with every fault at once, before anything is recorded.
+    out are chosen. ``forces_csv`` names a file of an office's frame analysis whose moments, shears
+    and torsions stand in the place of our own analysis, ``reactions_csv`` its reactions.
+
+    Raises :class:`UserError` with every fault at once, before anything is recorded.
     """
     given: dict[str, Any] = dict(locals())
     inputs, pair = read_inputs(given, sheet.project)
@@ -149,6 +161,7 @@ def continuous_beam(
     sheet.member = member_of(inputs)
     beam = ContinuousBeam(sheet, inputs, pair)
     sheet.expect(calls_of(inputs))
+    sheet.not_covered = not_covered(inputs)
     load_take_down.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair)
     return beam
@@ -171,7 +184,7 @@ def calls_of(inputs: ContinuousInputs) -> dict[str, str]:
     calls[LOADS] = "beam.loads()"
     calls |= {span_key(k): "beam.spans()" for k in range(1, count + 1)}
     calls[ANALYSIS] = "beam.analysis()"
-    if count > 1:
+    if count > 1 and inputs.forces_file is None:
         calls[COEFFICIENTS] = "beam.analysis()"
     calls[basics.COVER] = "beam.flexure()"
     return calls | dict.fromkeys(flexure.part_keys(inputs), "beam.flexure()")

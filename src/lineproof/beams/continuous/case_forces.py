@@ -12,6 +12,7 @@ from dataclasses import dataclass
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.groups import Group, groups_of, moment_name, named
+from lineproof.beams.continuous.imported_case import record_imported
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model, SingleLoad
 from lineproof.beams.continuous.symbols import code, stated
 from lineproof.beams.steps import Steps
@@ -51,6 +52,9 @@ def record_forces(
     the place where the shear is zero. M_f and V_f are sizes, positive; which face is in tension
     stands in the title.
     """
+    if model.imported is not None:
+        record_imported(steps, model, demand, near, x=x)
+        return
     case = case_on_span(model, demand, near)
     lines = _Lines(steps, model, demand, case)
     lines.record_ends()

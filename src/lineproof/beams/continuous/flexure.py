@@ -21,7 +21,7 @@ from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.numbers import Numbers
-from lineproof.beams.continuous.restraint import record_restraint, restraint_moment
+from lineproof.beams.continuous.restraint import held_in_frame, record_restraint, restraint_moment
 from lineproof.beams.continuous.section_checks import (
     SPREAD_AREAS,
     TENSION_AREAS,
@@ -93,9 +93,10 @@ def sagging_spans(model: Model) -> list[int]:
 
 
 def nominally_simple(model: Model, face: Face) -> bool:
-    """Tell whether a face is at an end support that is analysed as simple."""
+    """Tell whether an end support is analysed as simple: not where an imported frame holds it."""
     kind = model.inputs.supports[face.support - 1].kind
-    return kind == "simple" and face.support in (1, model.spans + 1) and not _hung(model, face)
+    simple = kind == "simple" and face.support in (1, model.spans + 1) and not _hung(model, face)
+    return simple and not held_in_frame(model, face.support, face.span)
 
 
 def _hung(model: Model, face: Face) -> bool:

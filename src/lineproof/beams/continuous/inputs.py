@@ -9,6 +9,8 @@ from typing import Any
 from lineproof.beams.analysis.model import Beam, Span, Support
 from lineproof.beams.analysis.redistribution import MOST, check_reductions
 from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
+from lineproof.beams.continuous.imported_forces import ForcesFile
+from lineproof.beams.continuous.imported_inputs import read_forces_file
 from lineproof.beams.continuous.typed_beam import (
     TypedLoad,
     TypedSupport,
@@ -89,6 +91,7 @@ class ContinuousInputs:
     carries: str
     sustained: Typed | None
     redistribution: Mapping[int, float]
+    forces_file: ForcesFile | None
 
     @property
     def slab(self) -> bool:
@@ -142,6 +145,7 @@ def read_inputs(
             "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
             "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),
         }
+    fields["forces_file"] = take("forces_csv", read_forces_file, given, fields)
     check_density(fields, given, reader.faults)
     _check_slab(fields, given, reader.faults)
     if not reader.faults.faults:

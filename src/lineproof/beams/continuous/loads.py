@@ -21,6 +21,10 @@ _HOLDS = {
     "elastic": "holds it with the stiffness of its columns",
     "free": "does not hold it",
 }
+_IMPORTED = (
+    "Moments and shears are brought in from a frame analysis: combinations, arrangements of live "
+    "load and lateral loads are its own, and no moment follows from the loads of this part."
+)
 
 
 def beam_symbols(inputs: ContinuousInputs) -> Iterator[Symbol]:
@@ -196,6 +200,8 @@ def record_loads(sheet: Sheet, inputs: ContinuousInputs, pair: CodePair) -> None
 
 def _notes(inputs: ContinuousInputs) -> str:
     weight = "The weight of the slab is counted once, over the tributary width. "
+    if inputs.forces_file is not None:
+        return (weight if inputs.slab else "") + _IMPORTED
     return (
         (weight if inputs.slab else "")
         + "Wind and earthquake are not carried by this beam. Every combination stands with 1.25 "

@@ -19,6 +19,11 @@ from lineproof.beams.analysis.model import (
     UniformLoad,
 )
 from lineproof.beams.continuous.forces import End, Forces
+from lineproof.beams.continuous.imported_forces import (
+    ForcesFile,
+    ImportedForces,
+    imported_forces,
+)
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport
 from lineproof.beams.continuous.symbols import code
@@ -92,6 +97,11 @@ class Model:
         """Number of spans."""
         return len(self.lengths)
 
+    @property
+    def imported(self) -> ImportedForces | None:
+        """The forces of an office's frame analysis, if they stand for our own."""
+        return self.forces if isinstance(self.forces, ImportedForces) else None
+
     def on_span(self, span: int) -> tuple[SingleLoad, ...]:
         """Return the single loads of a span."""
         return tuple(load for load in self.single if load.span == span)
@@ -138,12 +148,18 @@ def model_of(sheet: Sheet, inputs: ContinuousInputs) -> Model:
         *(UniformLoad(kind, k, entry.value) for (kind, k), entry in uniform.items()),
         *(load.load for load in single),
     )
-    forces = _forces(Beam(spans, supports), acting, tuple(inputs.redistribution.items()))
+    beam, file = Beam(spans, supports), inputs.forces_file
+    if file is not None:
+        forces: Forces = _imported(beam, file)
+    else:
+        forces = _forces(beam, acting, tuple(inputs.redistribution.items()))
     return Model(sheet, inputs, lengths, uniform, single, inertias, stiffnesses, forces)
 
 
 def needs_inertia(inputs: ContinuousInputs) -> bool:
     """Tell whether the stiffness of the spans does not cancel out of the analysis."""
+    if inputs.forces_file is not None:
+        return False
     depths = {depth.value for depth in inputs.depths}
     return len(depths) > 1 or any(s.kind == "elastic" for s in inputs.supports)
 
@@ -181,6 +197,11 @@ def _forces(
     beam: Beam, loads: tuple[Load, ...], reductions: tuple[tuple[int, float], ...]
 ) -> Forces:
     return Forces.of(beam, loads, reductions=dict(reductions))
+
+
+@lru_cache(maxsize=8)
+def _imported(beam: Beam, file: ForcesFile) -> Forces:
+    return imported_forces(beam, file)
 
 
 def outline_of(sheet: Sheet, inputs: ContinuousInputs) -> BeamOutline:

@@ -7,8 +7,10 @@ w l^2 with a girder (a spandrel), 1/16 with a column. On a wall the beam rests f
 from __future__ import annotations
 
 from collections.abc import Mapping
+from typing import Any
 
 from lineproof.beams.continuous.case_forces import factor_text
+from lineproof.beams.continuous.imported_restraint import record_load_terms, span_loads
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.symbols import code, stated
 from lineproof.beams.steps import Steps
@@ -22,10 +24,18 @@ _TEXT = (
     "The beam is analysed as simply supported here but cast with a {carrier} that restrains its "
     "end; the restraint is assumed by the coefficient of clause 9.3.3 for an exterior support."
 )
+_TEXT_IMPORTED = (
+    "The beam is cast with a {carrier} that restrains its end. The frame analysis gives no larger "
+    "moment here than the coefficient of clause 9.3.3 for an exterior support, which is taken."
+)
 
 
-def _worst_case(model: Model, span: int) -> tuple[float, int]:
+def worst_case(model: Model, span: int) -> tuple[float, int]:
     """Return the largest load on a span [N/mm], single loads smeared, and the row of its case."""
+    if model.imported is not None:
+        loads = span_loads(model.imported, span)
+        row = int(loads.argmax())
+        return float(loads[row]), row
     return max(
         ((_load(model, span, row), row) for row in range(len(model.forces.cases))),
         key=lambda pair: (round(pair[0], 9), -pair[1]),
@@ -35,7 +45,7 @@ def _worst_case(model: Model, span: int) -> tuple[float, int]:
 def _load(model: Model, span: int, row: int) -> float:
     length = model.lengths[span - 1].value
     factors = {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
-    total = sum(
+    total: float = sum(
         f * model.uniform[kind, span].value
         for kind, f in factors.items()
         if (kind, span) in model.uniform
@@ -53,17 +63,26 @@ def restraint_moment(model: Model, support: int, span: int) -> float:
     share = SHARES.get(model.inputs.supports[support - 1].carrier)
     if share is None:
         return 0.0
-    w_f, _ = _worst_case(model, span)
+    w_f, _ = worst_case(model, span)
     length: float = model.lengths[span - 1].value
     return w_f * length * length / share
+
+
+def held_in_frame(model: Model, support: int, span: int) -> bool:
+    """Tell whether an imported frame analysis gives an end a larger moment than the restraint."""
+    if model.imported is None:
+        return False
+    hogging = -model.imported.hog(support, "right" if span == support else "left").M
+    return hogging > restraint_moment(model, support, span)
 
 
 def record_restraint(steps: Steps, model: Model, support: int, span: int) -> None:
     """Record the load and the moment of restraint inside the open part; bind M_f."""
     sheet = model.sheet
     carrier = model.inputs.supports[support - 1].carrier
-    sheet.note("restraint", _TEXT.format(carrier=carrier), title="Restraint", basis=COMMON_PRACTICE)
-    _, row = _worst_case(model, span)
+    text = _TEXT if model.imported is None else _TEXT_IMPORTED
+    sheet.note("restraint", text.format(carrier=carrier), title="Restraint", basis=COMMON_PRACTICE)
+    _, row = worst_case(model, span)
     case = str(model.forces.cases[row])
     terms, bound = _terms(model, span, row)
     bound["l"] = model.lengths[span - 1]
@@ -75,11 +94,13 @@ def record_restraint(steps: Steps, model: Model, support: int, span: int) -> Non
     steps.line(_FORMULAS[carrier])
 
 
-def _only(names: Mapping[str, Entry]) -> dict[str, object]:
+def _only(names: Mapping[str, Entry]) -> dict[str, Any]:
     return dict(names)
 
 
 def _terms(model: Model, span: int, row: int) -> tuple[list[str], dict[str, Entry]]:
+    if model.imported is not None:
+        return record_load_terms(model.sheet, model.imported, span, row)
     factors = {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
     terms, bound = [], {}
     for kind, factor in factors.items():
@@ -89,8 +110,8 @@ def _terms(model: Model, span: int, row: int) -> tuple[list[str], dict[str, Entr
             terms.append(f"{factor_text(factor)}*{name}")
     for load in model.on_span(span):
         if load.kind in factors:
-            n, factor = load.number, factor_text(factors[load.kind])
+            n, times = load.number, factor_text(factors[load.kind])
             bound |= load.entries
             size = f"P_x{n}" if load.at is not None else f"w_x{n}*(e_x{n} - s_x{n})"
-            terms.append(f"2*{factor}*{size}/l")
+            terms.append(f"2*{times}*{size}/l")
     return terms, bound

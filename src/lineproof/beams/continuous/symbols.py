@@ -41,6 +41,11 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"M_\d+[lr]?(D|S|L\d+|Lst\d+)", "kN.m"),
         (r"R_\d+(D|S|L\d*|Lst\d*)", "kN"),
         (r"F_\d+[ab](D|S|L\d+|Lst\d+)", "kN.m2"),
+        (r"x_[ijs]", "m"),
+        (r"[MT]_[ij]", "kN.m"),
+        (r"V_[ij](e|\d+)?", "kN"),
+        (r"M_max", "kN.m"),
+        (r"V_max", "kN"),
     )
 )
 
