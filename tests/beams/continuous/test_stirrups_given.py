@@ -13,7 +13,7 @@ from lineproof.beams.continuous.stirrups import first_distance, grid
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.errors import UserError
 
-from .shear_models import BASIS, case_of, three_spans, uniform
+from .shear_models import BASIS, case_of, new_sheet, record, three_spans, uniform
 
 
 def checked(*zones: Any, basis: ShearBasis = BASIS) -> Choice:
@@ -118,6 +118,19 @@ def test_too_few_bars_for_the_general_method_are_refused() -> None:
     case = case_of((6000.0,), uniform((6000.0,), 60, 30), bottom=(400.0, 566.0))
     with pytest.raises(UserError, match=r"bottom_bars: span 1, .* strain leaves the range"):
         choose_stirrups(case.outline, case.forces, BASIS, case.spans)
+
+
+def test_what_stirrups_cannot_cure_fails_where_they_are_given() -> None:
+    """The same beam with stirrups as built is checked, and its printed check fails."""
+    case = case_of((6000.0,), uniform((6000.0,), 60, 30), bottom=(400.0, 566.0))
+    zone = [{"span": 1, "spacing": "150 mm"}]
+    choice = check_stirrups(case.outline, case.forces, BASIS, case.spans, zone)
+    assert choice.worst > 1
+    made = record(new_sheet(BASIS), case, choice).data
+    [failed] = [e for p in made["parts"] if p["key"] == "shear-1-left" for e in p["entries"]
+                if e["kind"] == "check"]  # fmt: skip
+    assert failed["id"] == "shear-1-left/strain-range"
+    assert failed["holds"] is False
 
 
 def test_stirrups_too_close_ask_for_thicker_ones() -> None:

@@ -9,9 +9,11 @@ from typing import Any
 import numpy as np
 import pytest
 
-from lineproof.beams.analysis.model import UniformLoad
-from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd
+from lineproof.beams.analysis.model import Beam, Span, Support, UniformLoad
+from lineproof.beams.continuous.forces import Forces
+from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd, SpanNumbers, Stretch
 from lineproof.beams.continuous.shear_sections import ShearSection
+from lineproof.beams.continuous.shear_state import span_state
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.beams.continuous.torsion import SpanTorsion
 from lineproof.beams.continuous.torsion_record import record_span_torsion
@@ -167,6 +169,40 @@ def test_torsion_falls_linearly_from_face_to_midspan() -> None:
     assert {"live load on spans 1, 2", "live load on span 2"} <= {
         name.arrangement for name in state.cases
     }
+
+
+def test_corner_bars_limit_the_spacing() -> None:
+    """10M corner bars of 11.3 mm: s <= 16 x 11.3 = 180.8 mm, less than half of 0.7 d_v here.
+
+    0.5 x 0.7 x 0.9 x 846 = 266 mm.
+    """
+    case = case_of((6000.0,), uniform((6000.0,), 10, 5), h=900.0, bottom=(6000.0, 846.0),
+                   top=(6000.0, 846.0))  # fmt: skip
+    acting = replace(torsion(BASIS, {"D": 7e3}, h=900.0), d_b=11.3)
+    case = turned(case, acting)
+    choice = choose_stirrups(case.outline, case.forces, CLOSED, case.spans)
+    state = choice.checks[0].state
+    assert state.allowed[state.v["counts"]].max() == pytest.approx(180.8)
+    assert {z.spacing for z in choice.zones} & {150.0, 175.0}
+    thick = turned(case, replace(acting, d_b=19.5))
+    free = choose_stirrups(thick.outline, thick.forces, CLOSED, thick.spans)
+    assert min(z.spacing for z in free.zones) > 180.8
+
+
+def test_torsion_of_a_cantilever_comes_from_its_tip() -> None:
+    """T = t (l_n - x) at the face of its only support; nothing at the tip."""
+    beam = Beam((Span(2400.0, 1e14), Span(6000.0, 1e14)),
+                (Support("free"), Support("simple", 450.0), Support("simple", 450.0)))  # fmt: skip
+    forces = Forces.of(beam, uniform((2400.0, 6000.0), 18, 0), DEAD_ONLY)
+    acting = torsion(BASIS, {"D": 6e3})
+    numbers = SpanNumbers(
+        1, 620.0, (Stretch(0, 2400, 1500, 566),), (Stretch(0, 2400, 3000, 560),),
+        SpanEnd("free", exterior=True), torsion=acting,
+    )  # fmt: skip
+    state = span_state(CLOSED, numbers, forces)
+    assert state.faces == (0.0, 2175.0)
+    assert state.v["T_all"][0, 1] == 0
+    assert state.v["T_all"][0, -2] == pytest.approx(6e3 * 2175)
 
 
 def test_small_torsion_is_neglected() -> None:

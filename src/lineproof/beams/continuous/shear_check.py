@@ -111,7 +111,7 @@ class SpanCheck:
     def spacing(self) -> Floats:
         """Spacing over the largest allowed; zero where no stirrups count or are needed."""
         widths = np.array([b.spacing for b in self.counted])[self.owners]
-        made: Floats = np.where(np.isinf(widths), 0.0, widths / self.state.v["s_max"])
+        made: Floats = np.where(np.isinf(widths), 0.0, widths / self.state.allowed)
         return made
 
     def at(self, row: int, column: int) -> Spot:

@@ -80,7 +80,8 @@ class _Pair:
 
 def choose_layouts(states: Sequence[SpanState]) -> tuple[SpanLayout, ...]:
     """Return the layout of every span; raises :class:`UserError` where no stirrups can do."""
-    refuse_hopeless(states)
+    refuse_open(states)
+    _refuse_hopeless(states)
     fits = [Fitting.of(state) for state in states]
     spacings = grid(states[0].basis.d_bs)
     closest = [s for s in spacings if all(fit.passes(s).all() for fit in fits)]
@@ -173,11 +174,16 @@ def _short_ends(fit: Fitting, layout: SpanLayout, run: tuple[float, float]) -> t
     return wrong[0], wrong[1]
 
 
-def refuse_hopeless(states: Sequence[SpanState]) -> None:
-    """Refuse spans that no stirrups help: web too small, strain out of range, open stirrups."""
-    faults: list[str] = []
-    for state in states:
-        faults += [*_open_with_torsion(state), *_hopeless(state)]
+def _refuse_hopeless(states: Sequence[SpanState]) -> None:
+    """Refuse spans that no stirrups help: web too small, strain out of range."""
+    faults = [fault for state in states for fault in _hopeless(state)]
+    if faults:
+        raise UserError(faults)
+
+
+def refuse_open(states: Sequence[SpanState]) -> None:
+    """Refuse stirrups that are not closed where torsion counts."""
+    faults = [fault for state in states for fault in _open_with_torsion(state)]
     if faults:
         raise UserError(faults)
 

@@ -22,6 +22,10 @@ _AT_FACE = {
 }
 _AT_D_V = "The support presses on the beam from below{loads}: sections nearer to the support than "
 _AT_D_V += "d_v are designed for the shear at d_v from its face."
+_OUT_OF_RANGE = (
+    "The strain lies outside the range of the general method: no resistance is given, and the "
+    "section does NOT hold. More bars on the face in tension, or a deeper beam."
+)
 _MIXED = (
     "The moment changes its sign near the section: the smaller of the depths to the top and to "
 )
@@ -91,7 +95,9 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
     _same(steps, "V_f", V_f)
     _same(steps, "M_f", section.values["M_f"], V_f * section.values["d_v"])
     record_torsion(steps, basis, section)
-    _record_method(steps, basis, section)
+    if not _record_method(steps, basis, section):
+        _note_other(steps, _OUT_OF_RANGE, "out-of-range", "Resistance")
+        return
     steps.line(shear.V_C)
     steps.line(shear.V_R_MAX)
     if section.plain:
@@ -103,8 +109,8 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
         _record_other(steps, basis)
 
 
-def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> None:
-    """Record factor and angle by the chosen method."""
+def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> bool:
+    """Record factor and angle by the chosen method; tell whether the section is in its range."""
     if section.plain:
         steps.line(shear.A_G)
         steps.line(shear.S_Z)
@@ -112,12 +118,13 @@ def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
         if section.counts:
             steps.line(torsion.SHEAR_IN_STRAIN)
         steps.line(torsion.EPS_X if section.counts else shear.EPS_X)
-        steps.check(shear.STRAIN_IN_RANGE)
+        if not steps.check(shear.STRAIN_IN_RANGE):
+            return False
         if section.plain:
             steps.line(shear.S_ZE)
         steps.line(shear.BETA_GENERAL if section.plain else shear.BETA_STIRRUPS)
         steps.line(shear.THETA)
-        return
+        return True
     row = "below minimum stirrups" if section.plain else "minimum stirrups or more"
     steps.bind(theta=steps.sheet.lookup("theta", shear.SIMPLIFIED, row))
     if not section.plain:
@@ -127,6 +134,7 @@ def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
     else:
         steps.line(shear.S_ZE)
         steps.line(shear.BETA_S_ZE)
+    return True
 
 
 def _record_plain(steps: Steps) -> None:
@@ -212,5 +220,7 @@ def _record_other(steps: Steps, basis: ShearBasis) -> None:
     )
 
 
-def _note_other(steps: Steps, text: str) -> None:
-    steps.sheet.note("other-method", text, title="Other method", clause="11.3.6", basis=SHEAR_2004)
+def _note_other(
+    steps: Steps, text: str, key: str = "other-method", title: str = "Other method"
+) -> None:
+    steps.sheet.note(key, text, title=title, clause="11.3.6", basis=SHEAR_2004)

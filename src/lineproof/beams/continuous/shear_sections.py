@@ -54,6 +54,7 @@ class ShearSection:
     counts: bool
     torques: tuple[tuple[str, float, float], ...]
     compatibility: bool
+    cantilever: bool
     cap: float | None
     bearing: SpanEnd | None
     values: Mapping[str, float]
@@ -174,6 +175,7 @@ def _section(
         counts=bool(v["counts"][row, column]),
         torques=_torques(check, forces, row),
         compatibility=acting is not None and acting.compatibility,
+        cantilever="free" in (state.numbers.left.held, state.numbers.right.held),
         cap=check.cap(end, row) if at_end and not v["counts"][row, column] else None,
         bearing=support if at_end and bottom and at_bearing(support) else None,
         values=_values(check, row, column),
@@ -229,9 +231,9 @@ def _values(check: SpanCheck, row: int, column: int) -> dict[str, float]:
     v: Mapping[str, Any] = check.state.v
     plain = bool(check.plain[row, column])
     names = ["d_v", "V_c", "V_rmax", "s_max", "M_f", "V_f", "T_f", "a_t"]
-    if check.state.basis.method == "general":
-        names += ["eps_x"]
     made = {name: float(v[name][row, column]) for name in names}
+    if check.state.basis.method == "general":
+        made["eps_x"] = float(v["eps_asked"][row, column])
     made["beta"] = float(v["beta_plain" if plain else "beta"][row, column])
     made["theta"] = float(v["theta"][row, column])
     if not v["counts"][row, column]:

@@ -32,6 +32,8 @@ STEP = 50.0
 """Distance of the stations at which a span is checked [mm], besides loads and ends."""
 MOST_STRAIN = 0.003
 """Range of the longitudinal strain of the general method."""
+MOST_PER_CORNER_BAR = 16.0
+"""Largest spacing of closed stirrups over the diameter of their corner bars (11.2.7)."""
 COARSE = 20.0
 """Size of aggregate from which the simplified method needs no s_ze [mm] (11.3.6.3)."""
 _LEAST_AREA = 1e-3
@@ -97,7 +99,16 @@ class SpanState:
     @cached_property
     def largest_spacing(self) -> Floats:
         """The largest spacing allowed at each column by 11.3.8 and by the minimum of 11.2.8.2."""
-        made: Floats = np.minimum(self.v["s_max"].min(axis=0), self.minimum_spacing)
+        made: Floats = np.minimum(self.allowed.min(axis=0), self.minimum_spacing)
+        return made
+
+    @cached_property
+    def allowed(self) -> Floats:
+        """The largest spacing of every case by 11.3.8, and for the corner bars by 11.2.7."""
+        made: Floats = self.v["s_max"]
+        if self.numbers.torsion is not None:
+            corner = MOST_PER_CORNER_BAR * self.numbers.torsion.d_b
+            made = np.where(self.v["counts"], np.minimum(made, corner), made)
         return made
 
     @cached_property
@@ -235,7 +246,12 @@ def _torsion_along(
     if numbers.torsion is None:
         return np.zeros_like(at)
     torque = torque_per_length(numbers.torsion, forces, numbers.span)
-    made: Floats = np.abs(torque[:, None] * ((faces[0] + faces[1]) / 2 - at))
+    still = (faces[0] + faces[1]) / 2
+    if numbers.left.held == "free":
+        still = faces[0]
+    elif numbers.right.held == "free":
+        still = faces[1]
+    made: Floats = np.abs(torque[:, None] * (still - at))
     return made
 
 

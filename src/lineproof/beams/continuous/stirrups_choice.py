@@ -13,7 +13,7 @@ import numpy as np
 from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.layout import BeamOutline, StirrupZone
 from lineproof.beams.continuous.shear_check import SpanCheck
-from lineproof.beams.continuous.shear_choice import RESERVE, choose_layouts, refuse_hopeless
+from lineproof.beams.continuous.shear_choice import RESERVE, choose_layouts, refuse_open
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanNumbers, check_basis
 from lineproof.beams.continuous.shear_sections import ShearSection, sections
 from lineproof.beams.continuous.shear_state import SpanState, span_state
@@ -88,7 +88,7 @@ def check_stirrups(
     for zones that cannot be built; what does not carry is left to fail its check.
     """
     states = _states(forces, basis, spans)
-    refuse_hopeless(states)
+    refuse_open(states)
     made = read_stirrups(given, {s.numbers.span: s.faces[1] - s.faces[0] for s in states}, basis)
     _refuse_gaps_with_torsion(states, made)
     checks: list[SpanCheck] = []
@@ -155,19 +155,25 @@ def _governs(state: SpanState, band: Band) -> str:
     asked = np.where(inside, state.required * wider / RESERVE, 0.0)
     if asked.max() > 1:
         return _by_strength(state, int(asked.argmax()), wider)
-    allowed = np.where(inside, state.v["s_max"].min(axis=0), math.inf)
+    allowed = np.where(inside, state.allowed.min(axis=0), math.inf)
     least = float(allowed.min())
     if wider > least and least <= state.minimum_spacing:
-        column = int(allowed.argmin())
-        row = int(state.v["s_max"][:, column].argmin())
-        if state.v["counts"][row, column]:
-            return f"the largest spacing, halved for torsion, is {least:.0f} mm (11.3.8.3)"
-        if state.v["closer"][row, column]:
-            return f"the largest spacing, halved for high shear, is {least:.0f} mm (11.3.8.3)"
-        return f"the largest spacing is {least:.0f} mm (11.3.8.1)"
+        return _by_spacing(state, int(allowed.argmin()), least)
     if wider > state.minimum_spacing:
         return f"the minimum stirrups stand at {state.minimum_spacing:.0f} mm (11.2.8.2)"
     return "alike over the beam: a wider spacing would do here"
+
+
+def _by_spacing(state: SpanState, column: int, least: float) -> str:
+    row = int(state.allowed[:, column].argmin())
+    v = state.v
+    if least < v["s_max"][:, column].min() * (1 - 1e-12):
+        return f"the corner bars carry closed stirrups up to {least:.0f} mm apart (11.2.7)"
+    if v["counts"][row, column]:
+        return f"the largest spacing, halved for torsion, is {least:.0f} mm (11.3.8.3)"
+    if v["closer"][row, column]:
+        return f"the largest spacing, halved for high shear, is {least:.0f} mm (11.3.8.3)"
+    return f"the largest spacing is {least:.0f} mm (11.3.8.1)"
 
 
 def _by_strength(state: SpanState, column: int, wider: float) -> str:

@@ -19,6 +19,10 @@ _HELD = (
     "The ends of the span are held against turning at the faces of the supports: the torque of "
     "each half goes to the nearer support, and T = t (l_n/2 - x)."
 )
+_HELD_ONCE = (
+    "The span is held against turning at the face of its support only: the torque beyond a section "
+    "passes through it, and T = t (l_n - x)."
+)
 _EQUILIBRIUM = "The torsion is needed for equilibrium: all of it is designed for."
 _COMPATIBILITY = (
     "The torsion arises from compatibility: the frame can redistribute what exceeds 0.67 times the "
@@ -28,7 +32,7 @@ _KINDS = {"D": "dead load", "L": "live load", "L_st": "live load of storage", "S
 
 
 def record_span_torsion(
-    steps: Steps, torsion: SpanTorsion, shape: Shape, corner: str
+    steps: Steps, torsion: SpanTorsion, shape: Shape, corner: str, *, cantilever: bool = False
 ) -> dict[str, Entry]:
     """Record inside the open part torques and section of a span; return what sections need.
 
@@ -43,7 +47,12 @@ def record_span_torsion(
             name, f"{torque / 1000:.12g} kN", f"torque per length by {_KINDS.get(kind, kind)}",
             source="kN.m per metre of beam",
         )  # fmt: skip
-    sheet.note("held", _HELD, title="Torsion along the span", clause="statics")
+    sheet.note(
+        "held",
+        _HELD_ONCE if cantilever else _HELD,
+        title="Torsion along the span",
+        clause="statics",
+    )
     text = _COMPATIBILITY if torsion.compatibility else _EQUILIBRIUM
     sheet.note("kind-of-torsion", text, title="Torsion", clause="11.2.9.2", basis=FROM_MEMORY)
     steps.lines(clause.AREA_RECTANGLE, clause.PERIMETER_RECTANGLE, clause.T_CR)
@@ -80,7 +89,7 @@ def record_torsion(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
         steps.bind(x_n=steps.entry("d_v"))
     else:
         steps.bind(x_n=steps.sheet.given("x_n", "0 mm", source="at the face"))
-    T_f = steps.line(clause.TORQUE)
+    T_f = steps.line(clause.TORQUE_CANTILEVER if section.cantilever else clause.TORQUE)
     if not steps.decide(clause.COUNTS):
         return
     if not basis.closed:

@@ -93,6 +93,12 @@ TORQUE = _formula(
     title="Torsion at the section, the ends held at the faces of the supports",
     basis=MECHANICS,
 )
+TORQUE_CANTILEVER = _formula(
+    "T_f = t_f*(l_n - x_n)",
+    clause="statics",
+    title="Torsion at the section of a cantilever, held at the face of its support",
+    basis=MECHANICS,
+)
 COUNTS = _criterion(
     "T_f > 0.25*T_cr",
     clause="11.2.9.1",
@@ -216,6 +222,7 @@ FORMULAS = (
     AREA_RECTANGLE, PERIMETER_RECTANGLE, AREA_OF_STIRRUP, PERIMETER_OF_STIRRUP, A_O, T_CR,
     COMPATIBILITY, T_R, LEG_FOR_TORSION, LEGS_FOR_SHEAR, LEGS, SHEAR_IN_STRAIN, EPS_X,
     SHEAR_IN_BARS, TENSION_SIDE, COMPRESSION_SIDE, END_SUPPORT, OVERHANG, AREA_L, PERIMETER_L,
-    AREA_T, PERIMETER_T, T_CR_FLANGE, TORQUE, LEGS_LEFT, FROM_FACE,
+    AREA_T, PERIMETER_T, T_CR_FLANGE, TORQUE, TORQUE_CANTILEVER, LEGS_LEFT,
+    FROM_FACE,
 )  # fmt: skip
 CRITERIA = (COUNTS, STRENGTH, LEGS_PROVIDED, SECTION, CORNER_BARS)
