@@ -9,6 +9,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 
@@ -25,7 +26,7 @@ _MORE = 60
 """Most spacings by which an end zone is made longer for the change of spacing."""
 
 
-@dataclass(frozen=True, eq=False, slots=True)
+@dataclass(frozen=True, eq=False)
 class Fitting:
     """What a span asks of its stirrups, from the face of the left support, sorted.
 
@@ -50,10 +51,17 @@ class Fitting:
             state.largest_spacing, 2 * (basis.b_w + state.h - 4 * basis.cover),
         )  # fmt: skip
 
+    @cached_property
+    def widest(self) -> Floats:
+        """The widest spacing at each station."""
+        strength = np.full_like(self.required, np.inf)
+        np.divide(1.0, self.required, out=strength, where=self.required > 0)
+        made: Floats = np.minimum(strength, self.allowed) * _ROOM
+        return made
+
     def passes(self, spacing: float) -> Truths:
         """Tell at which stations a spacing is close enough."""
-        room = 1 + 1e-12
-        made: Truths = (self.required * spacing <= room) & (spacing <= self.allowed * room)
+        made: Truths = self.widest >= spacing
         return made
 
     def run(self, spacing: float) -> tuple[float, float] | None:
@@ -84,7 +92,8 @@ def choose_layouts(states: Sequence[SpanState]) -> tuple[SpanLayout, ...]:
     _refuse_hopeless(states)
     fits = [Fitting.of(state) for state in states]
     spacings = grid(states[0].basis.d_bs)
-    closest = [s for s in spacings if all(fit.passes(s).all() for fit in fits)]
+    most = min(float(fit.widest.min()) for fit in fits)
+    closest = [s for s in spacings if s <= most]
     if not closest:
         raise UserError(list(_too_close(states, fits, spacings[-1])))
     best: tuple[float, int, tuple[SpanLayout, ...]] | None = None
@@ -108,7 +117,7 @@ def _pairs(
 ) -> list[_Pair]:
     """Return the pairs of spacings, those that may weigh least first; equals widest first."""
     found = []
-    widest = max(float(fit.allowed.max()) for fit in fits) * _ROOM
+    widest = max(float(fit.widest.max()) for fit in fits)
     for spacing in (s for s in spacings if s <= widest):
         runs = tuple(fit.run(spacing) for fit in fits)
         for end in (s for s in closest if s <= spacing):
@@ -231,12 +240,10 @@ def _hopeless(state: SpanState) -> Iterator[str]:
 
 def _too_close(states: Sequence[SpanState], fits: Sequence[Fitting], least: float) -> Iterator[str]:
     for state, fit in zip(states, fits, strict=True):
-        if fit.passes(least).all():
-            continue
-        strength = np.divide(1.0, fit.required, where=fit.required > 0,
-                             out=np.full_like(fit.required, np.inf))  # fmt: skip
-        needed = np.minimum(strength, fit.allowed)
+        needed = fit.widest
         column = int(needed.argmin())
+        if needed[column] >= least:
+            continue
         yield (
             f"stirrup: span {state.numbers.span}, {state.columns[column] / 1000:.2f} m from its "
             f"left axis: {state.basis.legs} legs {state.basis.stirrup} would have to stand at "
