@@ -1,12 +1,10 @@
-"""Shear within the flow: forces recorded line by line, what the cutting of bars takes from it."""
+"""Shear within the flow: with the forces of each section recorded line by line."""
 
 from __future__ import annotations
 
 from collections.abc import Mapping
-from itertools import pairwise
 from typing import Any
 
-import numpy as np
 import pytest
 
 from lineproof.beams.continuous.case_forces import record_forces
@@ -20,14 +18,12 @@ from lineproof.beams.continuous.shear_numbers import (
     Stretch,
 )
 from lineproof.beams.continuous.shear_record import record_place, record_section
-from lineproof.beams.continuous.shear_stretches import shear_stretches
 from lineproof.beams.continuous.stirrups_choice import choose_stirrups
 from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.steps import Steps
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
 from .flow import MIXED, analysed, record_so_far
-from .shear_models import BASIS, second, three_spans
 
 
 def end_of(support: BuiltSupport, *, exterior: bool) -> SpanEnd:
@@ -72,35 +68,3 @@ def test_shear_with_forces_line_by_line(changes: Mapping[str, Any]) -> None:
             V_r = section.values["V_r"]
             assert steps.entry("V_r").value == pytest.approx(V_r, rel=1e-8)
     assert not list(faults(record_so_far(beam).data))
-
-
-def test_stretches_are_never_above_any_case() -> None:
-    """V_r, V_s and the angle of a piece are the least of every case at every mm within it."""
-    case = three_spans()
-    choice = choose_stirrups(case.outline, case.forces, BASIS, case.spans)
-    pieces = shear_stretches(choice, case.outline)
-    assert [round(p.end, 6) for p in pieces if p.end in (7375.0, 16575.0, 24175.0)]
-    for check in choice.checks:
-        state, span = check.state, check.state.numbers.span
-        axis, numbers = case.outline.axes[span - 1], case.spans[span - 1]
-        mine = [p for p in pieces if axis <= p.start < axis + case.outline.lengths[span - 1]]
-        assert mine[0].start == axis + 225
-        assert mine[-1].end == axis + case.outline.lengths[span - 1] - 225
-        assert all(a.end == b.start for a, b in pairwise(mine))
-        for piece in mine:
-            x = np.linspace(piece.start, piece.end, 40) - axis
-            inside = (x >= state.left.x.max()) & (x <= state.right.x.min())
-            x = x[inside]
-            M, V = case.forces.along(span, x)
-            bottom, top = numbers.bottom[0], numbers.top[0]
-            d, A_s = np.where(M >= 0, bottom.d, top.d), np.where(M >= 0, bottom.A_s, top.A_s)
-            found = second(BASIS, state.h, d, A_s, M, V)
-            closest = min(b.spacing for b in check.bands)
-            widest = max(b.spacing for b in check.bands)
-            if len(x):
-                assert piece.V_r <= found.resistance(BASIS, closest).min() * (1 + 1e-9)
-                assert piece.V_s <= (0.85 * 200 * 400 * found.d_v * found.cot / closest).min() * (
-                    1 + 1e-9
-                )
-                assert piece.V_s >= 0.9 * (0.85 * 200 * 400 * found.d_v * found.cot / widest).min()
-                assert piece.theta <= np.degrees(np.arctan(1 / found.cot)).min() + 1e-9

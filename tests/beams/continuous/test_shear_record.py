@@ -53,6 +53,17 @@ def test_three_spans_are_followed_by_hand(method: str) -> None:
     assert {f"shear-{k}-{end}" for k in (1, 2, 3) for end in ("left", "right")} <= set(keys)
 
 
+def test_the_table_counts_every_stirrup_once() -> None:
+    choice, record = made(three_spans())
+    table = entries(record, "stirrups")["stirrup-zones"]["rows"]
+    assert sum(int(row[2].partition("-")[0]) for row in table) == sum(
+        z.number for z in choice.zones
+    )
+    assert table[0][:3] == ["1", "0.000 to 6.175", "18-10M at 350 mm"]
+    assert table[1][2] == "5-10M at 225 mm"
+    assert [row[3] for row in table] == [r.partition("; ")[2] for r in choice.reasons]
+
+
 def test_every_check_of_an_end_is_printed() -> None:
     _, record = made(three_spans())
     printed = entries(record, "shear-1-left")

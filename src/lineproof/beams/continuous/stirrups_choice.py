@@ -100,7 +100,7 @@ def check_stirrups(
         zones += stirrups.placed(outline.faces(span)[0], _one(basis, span))
         check = _finer(state, stirrups.bands, forces)
         checks.append(check)
-        reasons += [f"Span {span}: {text}" for text in _standing(check)]
+        reasons += [f"Span {span}, {text}" for text in _standing(check)]
     return Choice(basis, tuple(zones), tuple(reasons), tuple(checks), forces, chosen=False)
 
 
@@ -188,14 +188,14 @@ def _by_strength(state: SpanState, column: int, wider: float) -> str:
 
 
 def _standing(check: SpanCheck) -> Iterator[str]:
-    """Say what the stirrups as given are used to."""
-    most = float(np.maximum(check.strength, check.spacing).max())
-    rows = ", ".join(
-        f"{b.spacing:g} mm from {b.start / 1000:.2f} to {b.end / 1000:.2f} m"
-        for b in check.bands
-        if not math.isinf(b.spacing)
-    )
-    yield f"{rows or 'no stirrups'}, as given; used to {100 * most:.0f} % at most."
+    """Say of each stretch of stirrups as given how much it is used."""
+    use = np.maximum(check.strength, check.spacing).max(axis=0)
+    for number, band in enumerate(check.bands):
+        what = "no stirrups" if math.isinf(band.spacing) else f"{band.spacing:g} mm"
+        place = f"{band.start / 1000:.2f} to {band.end / 1000:.2f} m"
+        most = float(use[check.owners == number].max(initial=0.0))
+        used = f"used to {100 * most:.0f} % at most" if math.isfinite(most) else "NOT allowed"
+        yield f"{place}: {what}, as given; {used}."
 
 
 def _refuse_gaps_with_torsion(

@@ -82,7 +82,8 @@ def _rows(choice: Choice, outline: BeamOutline) -> list[list[str]]:
         face = outline.faces(span)[0]
         zones = [zone for zone in choice.zones if zone.span == span]
         for band in check.bands:
-            inside = [z for z in zones if band.start - 1 < z.start - face < band.end + 1]
+            middles = [(z, (z.start + z.end) / 2 - face) for z in zones]
+            inside = [z for z, u in middles if band.start <= u <= band.end]
             place = f"{band.start / 1000:.3f} to {band.end / 1000:.3f}"
             rows.append([str(span), place, _text(inside, band.spacing), ""])
         for row, why in zip(rows[-len(check.bands) :], _why(reasons, span), strict=False):
