@@ -108,6 +108,11 @@ class SpanNumbers:
     A_sr: float | None = None
     torsion: SpanTorsion | None = None
 
+    @property
+    def faces(self) -> tuple[tuple[Stretch, ...], tuple[Stretch, ...]]:
+        """The bars of both faces: bottom, top."""
+        return self.bottom, self.top
+
 
 def area_at(bars: Sequence[Stretch], x: Floats) -> Floats:
     """Return the area of the bars of a face at stations; where stretches meet, the smaller."""

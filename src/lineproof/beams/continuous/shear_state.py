@@ -157,15 +157,15 @@ def span_state(
     x, sides, M, V = _along(forces, span, faces, (extra, ends))
     left, right = (_critical(basis, end, forces, M, V, 3 * n) for n, end in enumerate(ends))
     x, sides, M, V = x[6:], sides[6:], M[:, 6:], V[:, 6:]
-    shape = (len(forces.cases), len(x) + 2)
-    at = np.empty(shape)
-    at[:, 0], at[:, 1:-1], at[:, -1] = left.x, x, right.x
+    at = _columns(left.x, x, right.x)
     M = np.hstack([left.M[:, None], M, right.M[:, None]])
     V = np.hstack([left.V[:, None], V, right.V[:, None]])
     bottom = M >= 0
-    d = np.where(bottom, depth_at(numbers.bottom, at), depth_at(numbers.top, at))
-    d[:, 0], d[:, -1] = left.d, right.d
-    areas = area_at(numbers.bottom, at), area_at(numbers.top, at)
+    d = np.where(bottom, *(_columns(left.d, depth_at(bars, x), right.d) for bars in numbers.faces))
+    areas = [
+        _columns(area_at(bars, left.x), area_at(bars, x), area_at(bars, right.x))
+        for bars in numbers.faces
+    ]
     v = _materials(basis) | {
         "h": numbers.h, "x": at, "M": M, "V": V, "M_f": np.abs(M), "V_f": np.abs(V),
         "bottom": bottom, "d": d, "A_s": np.where(bottom, *areas),
@@ -182,6 +182,13 @@ def span_state(
     sides = ("left", *sides, "right")
     cases = forces.cases
     return SpanState(basis, numbers, cases, faces, x, sides, left, right, v, before | after)
+
+
+def _columns(left: Floats, stations: Floats, right: Floats) -> Floats:
+    """Return an array (cases, columns) from both critical sections and the stations."""
+    made = np.empty((len(left), len(stations) + 2))
+    made[:, 0], made[:, 1:-1], made[:, -1] = left, stations, right
+    return made
 
 
 @dataclass(frozen=True, slots=True)
