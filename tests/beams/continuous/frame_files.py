@@ -12,6 +12,7 @@ from pathlib import Path
 import numpy as np
 
 from lineproof.beams.analysis.arrangements import LoadCase
+from lineproof.beams.analysis.curves import Side
 from lineproof.beams.continuous.forces import Forces
 
 HEADER = "span,station (m),case,combination,M (kN.m),V (kN),T (kN.m)"
@@ -41,19 +42,28 @@ def rows_of(
 ) -> list[str]:
     """Return the lines of a file of forces under the header."""
     made = []
+    places = [
+        (span, x, side)
+        for span in range(1, len(forces.beam.spans) + 1)
+        for x in stations_of(forces, span, pieces)
+        for side in sides_of(forces, span, x)
+    ]
+    pairs = [forces.pairs(*place) for place in places]
     for row, case in enumerate(forces.cases):
-        for span in range(1, len(forces.beam.spans) + 1):
-            length = forces.beam.spans[span - 1].length
-            for x in stations_of(forces, span, pieces):
-                both = ("right",) if x == 0 else ("left",) if x == length else ("left", "right")
-                sides = [forces.pairs(span, x, side) for side in both]  # type: ignore[arg-type]
-                shears = dict.fromkeys(round(float(V[row]) / 1e3, decimals) for _, V in sides)
-                M = round(float(sides[0][0][row]) / 1e6, decimals)
-                made += [
-                    f"{span},{x / 1000:.6f},{names(case)},{M!r},{V!r},{torsion(span, x)!r}"
-                    for V in shears
-                ]
+        for (span, x, _), (M, V) in zip(places, pairs, strict=True):
+            numbers = round(float(M[row]) / 1e6, decimals), round(float(V[row]) / 1e3, decimals)
+            texts = ",".join(repr(number) for number in (*numbers, torsion(span, x)))
+            made.append(f"{span},{x / 1000:.6f},{names(case)},{texts}")
     return made
+
+
+def sides_of(forces: Forces, span: int, x: float) -> tuple[Side, ...]:
+    """Return the sides on which a station is written: both where the shear of a case jumps."""
+    curves = forces.solved.solution.span(span)
+    if x in (0.0, curves.length):
+        return ("left",) if x else ("right",)
+    jumps = curves.P[:, np.abs(curves.breaks - x) < 1e-6].any()
+    return ("left", "right") if jumps else ("right",)
 
 
 def reaction_rows(forces: Forces, *, decimals: int = 3) -> list[str]:

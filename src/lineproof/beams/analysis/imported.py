@@ -49,6 +49,9 @@ REACTIONS = (
 )
 TOLERANCE = 0.01
 """Statics hold within this part of the largest moment or shear of the case in the span."""
+SMALL_CASE = 0.1
+"""A case smaller than this part of the largest moment of the span is checked as if it were so
+large: the numbers of a nearly empty case are little more than their rounding."""
 WIDEST_GAP = 1 / 8
 """Stations stand no farther apart than this part of the span."""
 ROUNDED = 0.5
@@ -98,12 +101,14 @@ def read_forces(
     table = _table(read_table(source, name, FORCES), lengths, faults)
     faults.raise_if_any()
     known = breaks or {}
+    largest = _largest(table)
     for case, spans in table.items():
         for number, length in enumerate(lengths, start=1):
             where = f"{case}, span {number}"
             rows = spans.get(number, ())
             _check_stations(rows, length, known.get(number, ()), where, faults)
-            _check_statics(rows, tolerance, where, faults)
+            least = SMALL_CASE * largest.get(number, 0.0)
+            _check_statics(rows, tolerance, least, where, faults)
     _check_alike(table, lengths, faults)
     faults.raise_if_any()
     return _imported(table, lengths)
@@ -160,10 +165,19 @@ def _check_stations(
             faults.add(f"{where}: {x / 1000:g} m stands more than {most} times (lines {lines})")
 
 
+def _largest(table: Table) -> dict[int, float]:
+    """Return the largest size of M of all cases by span."""
+    made: dict[int, float] = defaultdict(float)
+    for spans in table.values():
+        for number, rows in spans.items():
+            made[number] = max(made[number], *(abs(row.M) for row in rows))
+    return made
+
+
 def _check_statics(
-    rows: Sequence[Ordinate], tolerance: float, where: str, faults: ManyFaults
+    rows: Sequence[Ordinate], tolerance: float, least: float, where: str, faults: ManyFaults
 ) -> None:
-    moment = max((abs(row.M) for row in rows), default=0.0)
+    moment = max((least, *(abs(row.M) for row in rows)))
     shear = max((abs(row.V) for row in rows), default=0.0)
     total, found = 0.0, len(faults.faults)
     drift = ""

@@ -145,7 +145,7 @@ def imported_forces(beam: Beam, file: ForcesFile) -> ImportedForces:
     """Return the forces of a file on a beam whose spans it was read for."""
     envelope = file.imported.envelope
     count, spans = len(envelope.cases), range(1, len(beam.spans) + 1)
-    kinds = [f"case {n}" for n in range(1, count + 1)]
+    kinds = [f"load case {n} of {file.name}" for n in range(1, count + 1)]
     rows: tuple[Row, ...] = tuple((kind, span) for kind in kinds for span in spans)
     factors = np.repeat(np.eye(count), len(beam.spans), axis=1)
     pieces = tuple(_pieces(file.imported, span) for span in spans)

@@ -8,7 +8,8 @@ from typing import Any
 
 import numpy as np
 
-from lineproof.beams.analysis.imported import TOLERANCE, WIDEST_GAP
+from lineproof.beams.analysis.arrangements import factored_combinations
+from lineproof.beams.analysis.imported import SMALL_CASE, TOLERANCE, WIDEST_GAP
 from lineproof.beams.continuous.forces import Demand
 from lineproof.beams.continuous.imported_case import case_symbols, record_station, typed
 from lineproof.beams.continuous.imported_forces import ForcesFile, ImportedForces, Piece
@@ -27,10 +28,12 @@ _SIGNS = (
 _BETWEEN = (
     "Between two neighbouring stations i and j of the file the load is taken uniform: V is linear, "
     "and M is the straight line from M_i to M_j plus the moment of that load on the piece between. "
-    "At the stations M and V are those of the file. A change of V within a station is a point load."
+    "At the stations M and V are those of the file. A change of V within a station is a "
+    "point load; a load over a short length is one only where the file writes it so."
 )
 _LARGEST = (
     numbered("M_max", "M", "max", "largest size of the moment of a case in a span, imported"),
+    numbered("M_all", "M", "all", "largest size of the moment of all cases in a span, imported"),
     numbered("V_max", "V", "max", "largest size of the shear of a case in a span, imported"),
 )
 _COUPLES = "A change of M over a support is the couple that columns take there."
@@ -40,6 +43,13 @@ _CASE_COLUMNS = [
     "Combination", "Case", "M, largest, kN.m", "At", "M, smallest, kN.m", "At",
     "V, largest size, kN", "At",
 ]  # fmt: skip
+_LOAD_COLUMNS = [
+    "Span", "File, kN", "Case", "Load take-down, kN", "Combination", "Ratio",
+]  # fmt: skip
+_TAKE_DOWN = (
+    "The load of a case on a span is the change of V from its left to its right end. A ratio far "
+    "from 1 asks for a reason: loads of the file that are not factored, or not of this beam."
+)
 _REACTION_COLUMNS = ["Support", "R, largest, kN", "Case", "R, smallest, kN", "Case"]
 NOT_COVERED = (
     {"check": "Deflections: the imported moments are not known by load type", "clause": "9.8"},
@@ -57,11 +67,17 @@ NOT_COVERED = (
         "clause": "9.2.3.1",
     },
 )
+_TORSION = {"check": "Torsion: T of the imported cases", "clause": "11.3.10"}
+"""Told until the shear of a span takes the torsion of the file."""
 
 
 def not_covered(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     """Return what imported forces leave uncovered; nothing for our own analysis."""
-    return [dict(row) for row in NOT_COVERED] if inputs.forces_file is not None else []
+    file = inputs.forces_file
+    if file is None:
+        return []
+    rows = (*NOT_COVERED, _TORSION) if file.imported.T.any() else NOT_COVERED
+    return [dict(row) for row in rows]
 
 
 def record_imported_analysis(model: Model) -> None:
@@ -87,6 +103,7 @@ def record_imported_analysis(model: Model) -> None:
         title = "Largest and smallest reactions of the imported cases, factored as in the file"
         sheet.table("imported-reactions", _REACTION_COLUMNS, _reaction_rows(model, forces),
                     title=title)  # fmt: skip
+        _record_take_down(model, forces)
         sheet.note("reactions-source", _reactions_text(file), title="Reactions")
 
 
@@ -136,7 +153,9 @@ def _checked_text(model: Model, file: ForcesFile) -> str:
         f"{known} and no two are farther apart than 1/{1 / WIDEST_GAP:g} of the span; M is the "
         "same on both sides of a station; between two stations, and from the left end of the span "
         f"to every station, M changes by the area of V, within {percent} of the largest moment of "
-        f"the case in the span, or of its largest shear times the distance{reactions}. M at a free "
+        f"the case in the span, or of its largest shear times the distance (of a case below "
+        f"{100 * SMALL_CASE:g} % of the largest moment in the span, of that part){reactions}. M at "
+        "a free "
         f"end is zero. {_COUPLES}"
     )
 
@@ -155,6 +174,7 @@ class _Worst:
     piece: Piece
     M: float
     V: float
+    M_all: float
 
 
 def _worst(forces: ImportedForces) -> _Worst:
@@ -167,10 +187,12 @@ def _worst(forces: ImportedForces) -> _Worst:
         most_M, most_V = (np.abs(each[:, i + j]).max(axis=1) for each in (M, V))
         lengths = np.array([p.x_j - p.x_i for p in pieces])
         gaps = np.abs(M[:, j] - M[:, i] - (V[:, i] + V[:, j]) / 2 * lengths)
-        allowed = np.maximum(most_M[:, None], most_V[:, None] * lengths)
+        M_all = float(most_M.max())
+        least = np.maximum(most_M, SMALL_CASE * M_all)
+        allowed = np.maximum(least[:, None], most_V[:, None] * lengths)
         parts = gaps / np.where(allowed > 0, allowed, np.inf)
         row, n = (int(each) for each in np.unravel_index(int(parts.argmax()), parts.shape))
-        most = float(most_M[row]), float(most_V[row])
+        most = float(most_M[row]), float(most_V[row]), M_all
         found.append(_Worst(float(parts[row, n]), row, span, pieces[n], *most))
     return max(found, key=lambda worst: worst.part)
 
@@ -187,9 +209,15 @@ def _record_closing(model: Model, forces: ImportedForces) -> None:
     largest = {
         "M_max": model.sheet.given("M_max", typed(worst.M, "kN.m"), source=source),
         "V_max": model.sheet.given("V_max", typed(worst.V, "kN"), source=source),
+        "M_all": model.sheet.given(
+            "M_all",
+            typed(worst.M_all, "kN.m"),
+            source=f"{forces.source.name}, all cases in span {worst.span}",
+        ),
     }
     test = required(
-        f"abs(M_j - M_i - (V_i + V_j)/2*(x_j - x_i)) <= {TOLERANCE}*max(M_max, V_max*(x_j - x_i))",
+        f"abs(M_j - M_i - (V_i + V_j)/2*(x_j - x_i)) <= "
+        f"{TOLERANCE}*max(M_max, V_max*(x_j - x_i), {SMALL_CASE}*M_all)",
         "kN.m", key="imported-statics", title=f"Statics where the file closes worst: {case}",
         yes="The moments of the file follow from its shears.",
     )  # fmt: skip
@@ -240,6 +268,44 @@ def _reactions_of(forces: ImportedForces, support: int) -> Sequence[float]:
         return [given[case][support - 1] for case in forces.cases]
     jumps: list[float] = forces.solved.solution.reactions[:, support - 1].tolist()
     return jumps
+
+
+def _record_take_down(model: Model, forces: ImportedForces) -> None:
+    """Record the load on each span by the file beside that of the take-down, for information."""
+    rows = []
+    V = forces.source.imported.envelope.V
+    for span, pieces in enumerate(forces.pieces, start=1):
+        loads = V[:, pieces[0].i] - V[:, pieces[-1].j]
+        row = int(loads.argmax())
+        ours, combination = _take_down(model, span)
+        rows.append([
+            str(span), _number(float(loads[row]), "kN"), str(forces.cases[row]),
+            _number(ours, "kN"), combination, f"{loads[row] / ours:.2f}" if ours > 0 else "–",
+        ])  # fmt: skip
+    model.sheet.table(
+        "imported-loads", _LOAD_COLUMNS, rows,
+        title="For information: largest load on each span, by the file and by the load take-down",
+    )  # fmt: skip
+    model.sheet.note("imported-loads-text", _TAKE_DOWN, title="Loads of the file")
+
+
+def _take_down(model: Model, span: int) -> tuple[float, str]:
+    """Return the largest factored load on a span by the load take-down, and its combination."""
+    total: dict[str, float] = {}
+    for (kind, k), entry in model.uniform.items():
+        if k == span:
+            total[kind] = total.get(kind, 0.0) + entry.value * model.lengths[span - 1].value
+    for load in model.on_span(span):
+        size = load.size.value
+        if load.start is not None and load.end is not None:
+            size *= load.end.value - load.start.value
+        total[load.kind] = total.get(load.kind, 0.0) + size
+    sums = [
+        (sum(factor * total.get(kind, 0.0) for kind, factor in combination.factors), combination)
+        for combination in factored_combinations(total)
+    ]
+    most, combination = max(sums, key=lambda each: each[0])
+    return most, combination.name
 
 
 def _reactions_text(file: ForcesFile) -> str:

@@ -27,6 +27,8 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"b_s\d+", "mm"),
         (r"I_\d+", "mm4"),
         (r"p_\d+", ""),
+        (r"[nr]_[tc]\d+", ""),
+        (r"A_[tc]\d\dM", "mm2"),
         (r"K_\d+", "mm3"),
         (r"w_(D|L|Lst|S)\d+", "kN/m"),
         (r"w_[xy]\d+", "kN/m"),
@@ -44,7 +46,7 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"x_[ijs]", "m"),
         (r"[MT]_[ij]", "kN.m"),
         (r"V_[ij](e|\d+)?", "kN"),
-        (r"M_max", "kN.m"),
+        (r"M_max|M_all", "kN.m"),
         (r"V_max", "kN"),
     )
 )
