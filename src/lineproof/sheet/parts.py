@@ -68,6 +68,15 @@ class Parts:
                 self._stopped.pop(key, None)
         self.expected = dict(calls)
 
+    def expect_of(self, call: str, keys: Iterable[str]) -> None:
+        """Say which parts one call makes, where that shows only when it is run.
+
+        Parts that the call made before and no longer makes are forgotten.
+        """
+        mine = dict.fromkeys(keys, call)
+        kept = {key: other for key, other in self.expected.items() if other != call}
+        self.expect(kept | mine)
+
     @property
     def part_entries(self) -> Mapping[str, Entry]:
         """The entries made so far in the open part, by symbol."""

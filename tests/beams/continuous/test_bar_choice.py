@@ -77,7 +77,7 @@ def _best_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int] | None:
 def _key_of_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int]:
     model = beam.model
     second, mass, number = 0, 0.0, 0
-    for span, chosen in flexure.choose_bottom(model, beam.pair).items():
+    for span, chosen in flexure.choose_bottom(model, beam.pair, {}).items():
         layers = chosen.bars
         assert isinstance(layers, tuple)
         second += len(layers) - 1
@@ -106,7 +106,7 @@ def test_no_bottom_bars_are_better(changes: dict[str, Any]) -> None:
     best = _best_bottom(beam)
     if best is None:
         with pytest.raises(UserError, match="bottom_bars"):
-            flexure.choose_bottom(beam.model, beam.pair)
+            flexure.choose_bottom(beam.model, beam.pair, {})
         return
     second, mass, number = _key_of_bottom(beam)
     assert (second, round(mass), number) == (best[0], round(best[1]), best[2])
@@ -132,7 +132,7 @@ def test_no_top_bars_are_better() -> None:
     """Three spans: one size for all supports, least mass (a third of each span beside)."""
     beam = analysed()
     model = beam.model
-    chosen = flexure.choose_top(model, beam.pair)
+    chosen = flexure.choose_top(model, beam.pair, {})
     lengths = {1: 7.6, 2: 7.6 + 9.2, 3: 9.2 + 7.6, 4: 7.6}
     best = {support: _best_top(beam, support) for support in chosen}
     totals = {

@@ -8,9 +8,10 @@ from typing import Any
 from lineproof.beams import basics
 from lineproof.beams.continuous import flexure
 from lineproof.beams.continuous import loads as load_take_down
-from lineproof.beams.continuous.bar_choice import Chosen, TopBars
 from lineproof.beams.continuous.coefficients import COEFFICIENTS, record_coefficients
 from lineproof.beams.continuous.cover import record_cover
+from lineproof.beams.continuous.deflections import record_deflections
+from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
 from lineproof.beams.continuous.geometry import record_spans
 from lineproof.beams.continuous.imported_record import not_covered, record_imported_analysis
 from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
@@ -23,6 +24,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
+from lineproof.beams.continuous.shear_chapter import record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.floor_beam import prepare
 from lineproof.quantity import QuantityInput
@@ -68,37 +70,31 @@ class ContinuousBeam:
         if self.model.spans > 1:
             record_coefficients(self.model)
 
+    def design(self) -> Design:
+        """Return bars and stirrups, given or chosen, from what stands on the sheet."""
+        return design_of(self.model, self.pair)
+
     def flexure(self) -> None:
         """Record bars and resistance at every span and both faces of every support."""
-        model = self.model
-        bottom, top = self._bars(model)
-        sizes = [layer.size for c in bottom.values() for layer in _layers(c)]
-        sizes += [_top(c).web.size for c in top.values()]
+        design = self.design()
+        model = design.model
+        sizes = [layer.size for chosen in design.bottom.values() for layer in layers_of(chosen)]
+        sizes += [top_of(chosen).web.size for chosen in design.top.values()]
         record_cover(self.sheet, self.inputs, sizes)
-        for span, chosen in bottom.items():
-            flexure.record_sag(model, span, _layers(chosen), self.pair)
+        for span, chosen in design.bottom.items():
+            flexure.record_sag(model, span, layers_of(chosen), self.pair)
         for support in range(1, model.spans + 2):
             if self.inputs.supports[support - 1].kind != "free":
-                bars = _top(top[support]) if support in top else None
+                bars = top_of(design.top[support]) if support in design.top else None
                 flexure.record_hog(model, support, bars, self.pair)
 
-    def _bars(self, model: Model) -> tuple[dict[int, Chosen], dict[int, Chosen]]:
-        bottom = flexure.choose_bottom(model, self.pair)
-        top = flexure.choose_top(model, self.pair)
-        flexure.refuse_unfit(bottom, "bottom_bars")
-        flexure.refuse_unfit(top, "top_bars")
-        return bottom, top
+    def shear(self) -> None:
+        """Record stirrups, shear and torsion, supports, and the plane of flange and web."""
+        record_shear(self.design())
 
-
-def _layers(chosen: Chosen) -> Any:
-    return chosen.bars
-
-
-def _top(chosen: Chosen) -> TopBars:
-    if not isinstance(chosen.bars, TopBars):
-        msg = f"{chosen.section} has no top bars"
-        raise TypeError(msg)
-    return chosen.bars
+    def deflections(self) -> None:
+        """Record the deflections of every span."""
+        record_deflections(self.model)
 
 
 def continuous_beam(
@@ -139,6 +135,13 @@ def continuous_beam(
     carries: str = "roof or floor with parts attached that deflection damages",
     sustained: QuantityInput | None = None,
     redistribution: Mapping[int, float] | None = None,
+    stirrup_legs: int = 2,
+    closed_stirrups: bool = False,
+    stirrups: Sequence[Mapping[str, Any]] | None = None,
+    bar_runs: Sequence[Mapping[str, Any]] | None = None,
+    torques: Mapping[str, QuantityInput] | None = None,
+    torsion: str = "compatibility",
+    slab_bars: str | None = None,
     forces_csv: str | None = None,
     reactions_csv: str | None = None,
     web_openings: str = "none",

@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
 
 from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.bottom_bars import bars_inside
+from lineproof.beams.choice import bars_for
 from lineproof.beams.continuous.bar_choice import (
     Chosen,
     Section,
@@ -132,56 +133,72 @@ def rules_of(model: Model) -> Rules:
     return Rules(model.inputs.shape, model.inputs.minimum_rule)
 
 
-def choose_bottom(model: Model, pair: CodePair) -> dict[int, Chosen]:
-    """Return the bottom bars of every span, given or chosen; raises :class:`UserError`."""
+def choose_bottom(
+    model: Model, pair: CodePair, given: Mapping[int, BarLayers]
+) -> dict[int, Chosen]:
+    """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`."""
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
     sections: dict[int, Section] = {}
     for span in sagging_spans(model):
         at = numbers_in(model, materials, span) | {"M_f": model.forces.sag(span).M}
-        given = model.inputs.bottom_bars[span - 1]
-        if given is not None:
-            made[span] = Chosen(f"span {span}", given, bottom_checks(at, rules, given, stirrup))
+        layers = given.get(span)
+        if layers is not None:
+            made[span] = Chosen(f"span {span}", layers, bottom_checks(at, rules, layers, stirrup))
         else:
             sections[span] = Section(f"span {span}", (at,), model.lengths[span - 1].value)
     found = choose(list(sections.values()), bottom_trial(rules, stirrup), "bottom_bars")
     return made | dict(zip(sections, found, strict=True))
 
 
-def choose_top(model: Model, pair: CodePair) -> dict[int, Chosen]:
+def choose_top(model: Model, pair: CodePair, given: Mapping[int, TopBars]) -> dict[int, Chosen]:
     """Return the top bars of every support that has a moment with the top in tension."""
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
     sections: dict[int, Section] = {}
     for support, numbers in _top_numbers(model, materials).items():
-        given = model.inputs.top_bars[support - 1]
         name = f"support {support}"
-        section = Section(name, tuple(numbers), _top_length(model, support))
-        if given is None:
-            sections[support] = section
+        top = given.get(support)
+        if top is None:
+            sections[support] = Section(name, tuple(numbers), _top_length(model, support))
             continue
-        bars_given = given_top(model, given[0], section)
-        faces = [
-            top_checks(dict(at), rules, bars_given.web, bars_given.overhang, stirrup)
-            for at in numbers
-        ]
-        worst = max(faces, key=lambda face: max(face.values()))
-        made[support] = Chosen(name, bars_given, worst)
+        faces = [top_checks(dict(at), rules, top.web, top.overhang, stirrup) for at in numbers]
+        made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))
     found = choose(list(sections.values()), top_trial(rules, stirrup), "top_bars")
     return made | dict(zip(sections, found, strict=True))
 
 
-def given_top(model: Model, web: BarLayer, section: Section) -> TopBars:
-    """Return given top bars with the bars of the same size that the overhangs need."""
-    sides = {"T": 2, "L": 1, "rectangular": 0}[model.inputs.shape]
+def given_bottom(model: Model) -> dict[int, BarLayers]:
+    """Return the bottom bars that the designer gave, by span."""
+    rows = enumerate(model.inputs.bottom_bars, start=1)
+    return {span: layers for span, layers in rows if layers is not None}
+
+
+def given_top_bars(model: Model, pair: CodePair) -> dict[int, TopBars]:
+    """Return the top bars that the designer gave, with those that the overhangs need."""
+    numbers = _top_numbers(model, materials_of(model, pair))
+    rows = enumerate(model.inputs.top_bars, start=1)
+    return {
+        support: _with_overhang(model, layers[0], numbers[support])
+        for support, layers in rows
+        if layers is not None and support in numbers
+    }
+
+
+SIDES = {"T": 2, "L": 1, "rectangular": 0}
+"""Number of overhangs of a shape."""
+
+
+def _with_overhang(model: Model, web: BarLayer, numbers: Iterable[Numbers]) -> TopBars:
+    """Return top bars with the bars of the same size that the overhangs need."""
+    sides = SIDES[model.inputs.shape]
     if not sides:
         return TopBars(web, 0, 0)
     needed = max(
         minimum.SPREAD_AREA.function(minimum.SPREAD_WIDTH.function(at["b_o"], at["l"]), at["h_f"])
-        for at in section.numbers
+        for at in numbers
     )
-    one = web.area / web.number
-    return TopBars(web, int(-(-needed // one)), sides)
+    return TopBars(web, bars_for(needed, web.size), sides)
 
 
 def _top_numbers(model: Model, materials: Mapping[str, float]) -> dict[int, list[Numbers]]:

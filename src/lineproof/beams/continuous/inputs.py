@@ -11,6 +11,7 @@ from lineproof.beams.analysis.redistribution import MOST, check_reductions
 from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
 from lineproof.beams.continuous.imported_forces import ForcesFile
 from lineproof.beams.continuous.imported_inputs import read_forces_file
+from lineproof.beams.continuous.interface import SlabBars, read_slab_bars
 from lineproof.beams.continuous.typed_beam import (
     TypedLoad,
     TypedSupport,
@@ -20,6 +21,7 @@ from lineproof.beams.continuous.typed_beam import (
     read_spans,
     read_supports,
 )
+from lineproof.beams.continuous.typed_torques import KINDS_OF_TORSION, read_torques
 from lineproof.beams.inputs import (
     MINIMUM_RULES,
     SHAPES,
@@ -47,6 +49,7 @@ from lineproof.standards.nbc.loads import USES
 METHODS = ("general", "simplified")
 AREA = Range("kPa", 0, 100, zero=True)
 SHARE = Range("", 0, 1, zero=True)
+LEAST_LEGS, MOST_LEGS = 2, 6
 DEEPEST = 2.0
 """Clear span over depth below which a beam is deep (10.7)."""
 STORED = ("storage area", "equipment room", "library stack room")
@@ -91,6 +94,13 @@ class ContinuousInputs:
     carries: str
     sustained: Typed | None
     redistribution: Mapping[int, float]
+    stirrup_legs: int
+    closed_stirrups: bool
+    stirrups: tuple[Mapping[str, Any], ...] | None
+    bar_runs: tuple[Mapping[str, Any], ...] | None
+    torques: Mapping[str, Typed]
+    torsion: str
+    slab_bars: SlabBars | None
     forces_file: ForcesFile | None
 
     @property
@@ -133,6 +143,13 @@ def read_inputs(
         "shear_method": take("shear_method", one_of, METHODS),
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
         "carries": take("carries", row_of, LIMITS),
+        "stirrup_legs": take("stirrup_legs", _read_legs),
+        "closed_stirrups": take("closed_stirrups", yes_or_no),
+        "stirrups": some("stirrups", _read_rows),
+        "bar_runs": some("bar_runs", _read_rows),
+        "torques": some("torques", read_torques) or {},
+        "torsion": take("torsion", one_of, KINDS_OF_TORSION),
+        "slab_bars": some("slab_bars", read_slab_bars),
     }  # fmt: skip
     take("web_openings", no_openings)
     if spans:
@@ -152,6 +169,26 @@ def read_inputs(
         _check_proportions(fields, reader.faults)
     reader.faults.raise_if_any()
     return ContinuousInputs(**fields), pair
+
+
+def _read_legs(name: str, given: object) -> int:
+    if (
+        isinstance(given, bool)
+        or not isinstance(given, int)
+        or not LEAST_LEGS <= given <= MOST_LEGS
+    ):
+        raise UserError(f"{name}: {echo(given)}; write {LEAST_LEGS} to {MOST_LEGS}")
+    return given
+
+
+def _read_rows(name: str, given: object) -> tuple[Mapping[str, Any], ...]:
+    rows = read_list(name, given)
+    faults = FaultList()
+    for number, row in enumerate(rows, start=1):
+        if not isinstance(row, Mapping):
+            faults.add(f"{name}, {number}: {echo(row)} is not understood; write {{'...': ...}}")
+    faults.raise_if_any()
+    return tuple(rows)
 
 
 def _read_redistribution(name: str, given: object) -> dict[int, float]:

@@ -1,47 +1,233 @@
-"""The shear resistance along a beam for cutting its bars: the least of all cases in each piece."""
+"""Between bars along the beam and shear: which bars count where, and what stirrups resist where.
+
+A bar counts as far as it is developed (11.3.6.4): over a stretch, with the least part that it
+reaches there. Two lapped bars count as one, which changes over at the middle of the lap.
+"""
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass
 from itertools import pairwise
 
 import numpy as np
 
-from lineproof.beams.continuous.detailing_data import ShearStretch
-from lineproof.beams.continuous.layout import BeamOutline
-from lineproof.beams.continuous.shear_check import SpanCheck
-from lineproof.beams.continuous.shear_choice import RESERVE
+from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
+from lineproof.beams.continuous.flexure import faces_of, hogging
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
+from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.resistance import (
+    Standing,
+    area_for,
+    section_depth,
+    shear_depth,
+    stand,
+)
+from lineproof.beams.continuous.shear_numbers import (
+    Held,
+    ShearBasis,
+    SpanEnd,
+    SpanNumbers,
+    Stretch,
+)
 from lineproof.beams.continuous.stirrups_choice import Choice
+from lineproof.beams.continuous.torsion_inputs import span_torsion
+
+_SHORT = 1e-6
 
 
-def shear_stretches(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ...]:
-    """Return pieces no longer than the depth, from face to face of every span.
+def basis_of(model: Model) -> ShearBasis:
+    """Return what shear rests on all along the beam."""
+    find, inputs = model.sheet.find, model.inputs
+    numbers = {
+        n: find(n).value for n in ("b_w", "f_c", "f_y", "phi_c", "phi_s", "lambda_", "a_max", "E_s")
+    }
+    return ShearBasis(
+        **numbers, cover=find("c_c").value, method=inputs.shear_method, stirrup=inputs.stirrup,
+        legs=inputs.stirrup_legs, closed=inputs.closed_stirrups,
+    )  # fmt: skip
 
-    Each has the smallest V_r, V_s and angle of all cases and stations within it, less a thousandth
-    for what lies between stations: what cutting bars asks for is then never less than any case
-    asks for. Where torsion counts, V_s is without the legs that torsion takes.
+
+@dataclass(frozen=True, slots=True)
+class Share:
+    """Bars of a run as they count over a stretch: ``part`` of their area.
+
+    ``length`` of ``rise`` [mm] is what they have to develop in, where that is not enough.
     """
+
+    run: BarRun
+    part: float
+    length: float = 0.0
+    rise: float = 0.0
+
+    @property
+    def area(self) -> float:
+        """Area that counts [mm2]."""
+        return self.run.area * self.part
+
+
+@dataclass(frozen=True, slots=True)
+class BarsOver:
+    """The bars of a face that count over a stretch from ``start`` to ``end`` along the beam."""
+
+    start: float
+    end: float
+    shares: tuple[Share, ...]
+
+    @property
+    def area(self) -> float:
+        """Area that counts [mm2]."""
+        return sum(share.area for share in self.shares)
+
+
+def bars_over(
+    designed: Designed, standing: Sequence[Standing], face: Face, span: int
+) -> tuple[BarsOver, ...]:
+    """Return the bars of a face that count along a span, stretch by stretch."""
+    left, right = designed.outline.axes[span - 1 : span + 1]
+    own = [bars for bars in standing if bars.run.face == face]
+    cuts = {left, right, (left + right) / 2, *_at_d_v(designed, span)}
+    for bars in own:
+        cuts |= {x for x in _marks(bars) if left < x < right}
+    made = []
+    for start, end in pairwise(sorted(cuts)):
+        if end - start > _SHORT:
+            places = [within_d_v(designed, span, x) for x in (start, end)]
+            shares = (_share(bars, places) for bars in own)
+            made.append(BarsOver(start, end, tuple(s for s in shares if s.part > 0)))
+    return tuple(made)
+
+
+def _marks(bars: Standing) -> Iterator[float]:
+    """Give the places at which the part of a run that counts begins to change, and between."""
+    run = bars.run
+    for end, rise, lap, inward in (
+        (run.start, bars.rise_start, bars.lap_start, 1),
+        (run.end, bars.rise_end, bars.lap_end, -1),
+    ):
+        steps = (0.5,) if lap else (0.0, 0.25, 0.5, 0.75, 1.0)
+        yield from (end + inward * rise * step for step in steps)
+
+
+def _share(bars: Standing, places: Sequence[float]) -> Share:
+    """Return the least part that a run reaches between two places."""
+    found = Share(bars.run, 1.0)
+    for x in places:
+        sides = (
+            (x - bars.run.start, bars.rise_start, bars.lap_start),
+            (bars.run.end - x, bars.rise_end, bars.lap_end),
+        )
+        for length, rise, lap in sides:
+            part = min(max(length / rise, 0.0), 1.0)
+            if lap:
+                part = 1.0 if length >= rise / 2 - _SHORT else 0.0
+            if part < found.part:
+                found = Share(bars.run, part, length, rise)
+    return found
+
+
+def _stretches(
+    designed: Designed, standing: Sequence[Standing], face: Face, span: int
+) -> Iterator[Stretch]:
+    """Give the areas of a face along a span, from its left axis, with the depths that count."""
+    left, right = designed.outline.axes[span - 1 : span + 1]
+    for over in bars_over(designed, standing, face, span):
+        near_left = over.start + over.end <= left + right
+        d = section_depth(designed, face, span, span if near_left else span + 1)
+        yield Stretch(over.start - left, over.end - left, over.area, d)
+
+
+def _at_d_v(designed: Designed, span: int) -> tuple[float, float]:
+    """Return the places d_v from both faces of a span, along the beam.
+
+    Nearer to a support the strain may be taken as at d_v from its face (11.3.6.4), so the bars
+    that count are those that count there; what they carry at the support itself is a check of
+    their anchorage.
+    """
+    start, end = designed.outline.faces(span)
+    h = designed.outline.depths[span - 1]
+    d_v = shear_depth(section_depth(designed, "bottom", span), h)
+    half = (end - start) / 2
+    return start + min(d_v, half), end - min(d_v, half)
+
+
+def within_d_v(designed: Designed, span: int, x: float) -> float:
+    """Return the place whose bars count at x: no nearer to a face than d_v."""
+    first, last = _at_d_v(designed, span)
+    return min(max(x, first), last)
+
+
+def span_numbers(
+    model: Model, designed: Designed, runs: Iterable[BarRun]
+) -> tuple[SpanNumbers, ...]:
+    """Return what the shear of every span rests on."""
+    standing = stand(designed, runs)
     return tuple(
-        piece
-        for check in choice.checks
-        for piece in _pieces(check, outline.axes[check.state.numbers.span - 1])
+        SpanNumbers(
+            span,
+            designed.outline.depths[span - 1],
+            tuple(_stretches(designed, standing, "bottom", span)),
+            tuple(_stretches(designed, standing, "top", span)),
+            _end(model, designed, span, "left"),
+            _end(model, designed, span, "right"),
+            needed_bottom(model, designed, span),
+            span_torsion(model, designed, span),
+        )
+        for span in range(1, model.spans + 1)
     )
 
 
-def _pieces(check: SpanCheck, axis: float) -> Iterator[ShearStretch]:
-    state, v = check.state, check.state.v
-    start = state.faces[0]
-    V_s = np.maximum(check.bars["V_s"], 0.0)
-    V_r = np.where(check.plain, v["V_plain"], np.minimum(v["V_c"] + V_s, v["V_rmax"]))
-    edges = {0.0, check.bands[-1].end, *(band.start for band in check.bands)}
-    edges |= set(np.arange(0.0, check.bands[-1].end, state.h).tolist())
-    bounds = sorted(edges)
-    for low, high in pairwise(bounds):
-        # One station further at each end, so that what lies between stations is covered.
-        first = int(np.searchsorted(check.u, low, side="left")) - 1
-        last = int(np.searchsorted(check.u, high, side="right")) + 1
-        inside = slice(max(first, 0), last)
-        V_r_least, V_s_least, theta = (
-            RESERVE * float(values[:, inside].min()) for values in (V_r, V_s, v["theta"])
+def _end(model: Model, designed: Designed, span: int, end: End) -> SpanEnd:
+    """Return how a support holds a span; the bars at the bearing are a check of the anchorage."""
+    support = span if end == "left" else span + 1
+    held: Held = "direct"
+    typed = model.inputs.supports[support - 1]
+    if typed.kind == "free":
+        held = "free"
+    elif typed.carrier == "girder":
+        held = "indirect"
+    cap = needed_top(model, designed, support) if held == "direct" else None
+    return SpanEnd(held, A_sr=cap)
+
+
+def needed_bottom(model: Model, designed: Designed, span: int) -> float | None:
+    """Return the area of bottom bars that the largest moment of a span alone asks for."""
+    if model.forces.beam.cantilever(span):
+        return None
+    d = section_depth(designed, "bottom", span)
+    return area_for(designed, model.forces.sag(span).M, d, designed.outline.widths[span - 1])
+
+
+def needed_top(model: Model, designed: Designed, support: int) -> float | None:
+    """Return the area of top bars that the larger of both moments at a support asks for."""
+    areas = [
+        area_for(
+            designed, hogging(model, face), section_depth(designed, "top", face.span, support),
+            designed.outline.b_w,
         )
-        yield ShearStretch(axis + start + low, axis + start + high, V_r_least, V_s_least, theta)
+        for face in faces_of(model)
+        if face.support == support
+    ]  # fmt: skip
+    return max(areas, default=0.0) or None
+
+
+def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ...]:
+    """Return the resistance of the stirrups along the beam: the weakest of all cases at a place."""
+    made = []
+    for check in choice.checks:
+        left = outline.axes[check.state.numbers.span - 1]
+        columns = check.state.columns + left
+        V_s, v = np.asarray(check.bars["V_s"]), check.state.v
+        V_c = np.where(check.plain, v["V_plain"], v["V_c"])
+        V_r = np.minimum(V_c + V_s, v["V_rmax"])
+        for i, (start, end) in enumerate(pairwise(columns.tolist())):
+            both = [i, i + 1]
+            if end - start > _SHORT:
+                made.append(
+                    ShearStretch(
+                        start, end, float(V_r[:, both].min()), float(V_s[:, both].min()),
+                        float(v["theta"][:, both].min()),
+                    )
+                )  # fmt: skip
+    return tuple(made)

@@ -1,0 +1,259 @@
+"""The chapter on shear: stirrups, every section that is printed, supports, flange and web."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+
+from lineproof.beams.continuous.bars_counted import record_area
+from lineproof.beams.continuous.bearing import (
+    hangers_needed,
+    largest_reaction,
+    record_bearing,
+    record_hangers,
+)
+from lineproof.beams.continuous.case_forces import factor_text, record_forces
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.flexure import Face as FaceOfSupport
+from lineproof.beams.continuous.flexure import faces_of, hogging
+from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.groups import Group, groups_of
+from lineproof.beams.continuous.interface import (
+    length_beside_sag,
+    record_interface,
+    record_interface_top,
+)
+from lineproof.beams.continuous.layout import Face
+from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
+from lineproof.beams.continuous.resistance import stand
+from lineproof.beams.continuous.shear_record import record_place, record_section
+from lineproof.beams.continuous.shear_sections import ShearSection
+from lineproof.beams.continuous.shear_stretches import Share, bars_over
+from lineproof.beams.continuous.stirrups_record import record_stirrups
+from lineproof.beams.continuous.symbols import stated
+from lineproof.beams.continuous.torsion_inputs import corner_bar
+from lineproof.beams.continuous.torsion_record import record_span_torsion
+from lineproof.beams.steps import Steps
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import bars
+from lineproof.standards.a23_3.bars import BARS
+
+STIRRUPS = "stirrups"
+CALL = "beam.shear()"
+_SAME = 1e-9
+
+
+def part_keys(design: Design) -> list[str]:
+    """Return the keys of the parts of this chapter, in order."""
+    model = design.model
+    keys = [STIRRUPS]
+    if model.inputs.torques:
+        keys += [f"torsion-{k}" for k in range(1, model.spans + 1)]
+    keys += [section.key for row in design.stirrups.sections for section in row]
+    supports = enumerate(model.inputs.supports, start=1)
+    keys += [f"support-{j}" for j, s in supports if s.kind != "free"]
+    if model.inputs.slab_bars is not None and model.inputs.slab:
+        keys += [f"interface-{k}" for k in design.bottom]
+        keys += [f"interface-{f.key}" for f in _faces_with_overhang(model)]
+    return keys
+
+
+def _faces_with_overhang(model: Model) -> list[FaceOfSupport]:
+    """Return the faces in whose parts bars of the overhang are recorded."""
+    made = []
+    parts = {part.key: part.entries for part in model.sheet.parts}
+    for face in faces_of(model):
+        number = parts.get(face.key, {}).get("n_o")
+        if number is not None and number.value > 0:
+            made.append(face)
+    return made
+
+
+def record_shear(design: Design) -> None:
+    """Record stirrups, torsion, the sections of every span, supports and the flange."""
+    model, choice = design.model, design.stirrups
+    sheet = model.sheet
+    sheet.expect_of(CALL, part_keys(design))
+    with sheet.part(STIRRUPS, "Stirrups"):
+        alike = record_stirrups(Steps(sheet, {}), choice, design.outline)
+    torsion = _record_torsion(design, alike)
+    for row in choice.sections:
+        for section in row:
+            _record_section(design, section, alike | torsion.get(section.span, {}))
+    _record_supports(design, alike)
+    if model.inputs.slab_bars is not None and model.inputs.slab:
+        _record_interfaces(design)
+
+
+def _record_torsion(design: Design, alike: Mapping[str, Entry]) -> dict[int, dict[str, Entry]]:
+    model, made = design.model, {}
+    for check in design.stirrups.checks:
+        acting, span = check.state.numbers.torsion, check.state.numbers.span
+        if acting is None:
+            continue
+        with model.sheet.part(f"torsion-{span}", f"Torsion of span {span}"):
+            place = span_place(model.sheet, model.inputs, span)
+            model.sheet.stand_for(place)
+            steps = Steps(model.sheet, place | dict(alike))
+            corner = corner_bar(design.designed, span)
+            made[span] = record_span_torsion(steps, acting, design.outline.shape, corner)
+    return made
+
+
+def _record_section(design: Design, section: ShearSection, more: Mapping[str, Entry]) -> None:
+    model = design.model
+    sheet, span = model.sheet, section.span
+    support = span if section.end == "left" else span + 1
+    with sheet.part(section.key, section.title):
+        place = span_place(sheet, model.inputs, span)
+        width = sheet.entries_of(GIVEN).get(f"b_s{support}")
+        place |= {} if width is None else {"b_sn": width}
+        place |= {"b_w": sheet.entry(f"{GIVEN}/b_w"), **more}
+        sheet.stand_for(place)
+        steps = Steps(sheet, place)
+        steps.bind(d=_depth(design, steps, section))
+        _record_bars(design, steps, section)
+        x = record_place(steps, section)
+        record_forces(steps, model, section.demand, section.end, x=x)
+        record_section(steps, design.stirrups.basis, section)
+
+
+def _depth(design: Design, steps: Steps, section: ShearSection) -> Entry:
+    """Return the recorded depth that the section was chosen by, or record it."""
+    sheet = steps.sheet
+    for part in sheet.parts:
+        known = part.entries.get("d") if part.key.startswith(("sag-", "hog-")) else None
+        if known is not None and abs(known.value - section.d) <= _SAME * section.d:
+            return known
+    sizes = {run.size for run in design.runs}
+    for size in sorted(sizes):
+        d_b = BARS.number(size, "d_b")
+        at = (steps.entry(n).value for n in ("h", "c_c", "d_bs"))
+        if abs(bars.DEPTH_ONE_LAYER.function(*at, d_b) - section.d) <= _SAME * section.d:
+            bound = sheet.lookup("d_b", BARS, size)
+            return steps.line(bars.DEPTH_ONE_LAYER, d_b=bound)
+    msg = f"{section.key}: no bars lie at the depth {section.d!r}"
+    raise AssertionError(msg)
+
+
+def _record_bars(design: Design, steps: Steps, section: ShearSection) -> None:
+    """Record the bars that count on both faces, and those for the largest moment alone."""
+    other: Face = "top" if section.tension == "bottom" else "bottom"
+    for symbol, face, area in (
+        ("A_s", section.tension, section.A_s),
+        ("A_sp", other, section.A_sp),
+    ):
+        record_area(steps, symbol, _counted(design, section, face, area))
+    if section.cap is not None:
+        steps.bind(A_sr=_needed(design.model, section))
+
+
+def _counted(design: Design, section: ShearSection, face: Face, area: float) -> tuple[Share, ...]:
+    """Return the bars of a face whose area the section was chosen by."""
+    x = design.outline.axes[section.span - 1] + section.demand.x
+    standing = stand(design.designed, design.runs)
+    for over in bars_over(design.designed, standing, face, section.span):
+        met = over.start - 1 <= x <= over.end + 1
+        if met and abs(over.area - area) <= _SAME * max(area, 1.0):
+            return over.shares
+    msg = f"{section.key}: the bars of the {face} have another area than {area!r}"
+    raise AssertionError(msg)
+
+
+def _needed(model: Model, section: ShearSection) -> Entry:
+    """Return the recorded area that the largest moment alone asks for."""
+    if section.tension == "bottom":
+        return model.sheet.entry(f"sag-{section.span}/A_sr")
+    support = section.span if section.end == "left" else section.span + 1
+    faces = [face for face in faces_of(model) if face.support == support]
+    worst = max(faces, key=lambda face: hogging(model, face))
+    return model.sheet.entry(f"{worst.key}/A_sr")
+
+
+def _record_supports(design: Design, alike: Mapping[str, Entry]) -> None:
+    model = design.model
+    for number, support in enumerate(model.inputs.supports, start=1):
+        if support.kind == "free":
+            continue
+        hung = support.carrier == "girder"
+        title = "hanger stirrups" if hung else "bearing"
+        with model.sheet.part(f"support-{number}", f"Support {number}: {title}"):
+            steps = Steps(model.sheet, dict(alike))
+            R_f = _record_reaction(steps, model, number)
+            if hung:
+                record_hangers(steps, hangers_needed(design.stirrups.basis, R_f.value))
+            else:
+                steps.bind(l_b=model.sheet.entry(f"{GIVEN}/b_s{number}"))
+                record_bearing(steps)
+
+
+def _record_reaction(steps: Steps, model: Model, support: int) -> Entry:
+    """Record the largest factored reaction of a support inside the open part, and bind it."""
+    row, R = largest_reaction(model.forces, support)
+    sheet, case = steps.sheet, model.forces.cases[row]
+    if model.inputs.forces_file is not None:
+        made = sheet.given("R_f", f"{R / 1000:.12g} kN", source=f"frame analysis, {case}")
+        steps.bind(R_f=made)
+        return made
+    entries = sheet.entries_of(ANALYSIS)
+    factors = model.forces.factors_of(row)
+    terms, bound = [], {}
+    for group in groups_of(model):
+        name = f"R_{support}{group.code}"
+        factor = _factor(factors, group)
+        if factor and name in entries:
+            bound[name] = entries[name]
+            terms.append(f"{factor_text(factor)}*{name}")
+    if model.inputs.redistribution:
+        made = sheet.given("R_f", f"{R / 1000:.12g} kN", source=f"after redistribution, {case}")
+        steps.bind(R_f=made)
+        return made
+    made = sheet.line(
+        stated(f"R_f = {' + '.join(terms)}"), title=f"Largest factored reaction: {case}", **bound
+    )
+    steps.bind(R_f=made)
+    return made
+
+
+def _factor(factors: Mapping[tuple[str, int], float], group: Group) -> float:
+    spans = [f for (kind, span), f in factors.items() if group.holds(kind, span)]
+    return spans[0] if spans else 0.0
+
+
+def _record_interfaces(design: Design) -> None:
+    """Record the plane between flange and web in every span and at the supports."""
+    model = design.model
+    slab = model.inputs.slab_bars
+    assert slab is not None  # asked for before  # noqa: S101
+    sheet = model.sheet
+    for span in design.bottom:
+        entries = sheet.entries_of(f"sag-{span}")
+        with sheet.part(f"interface-{span}", f"Span {span}: flange and web in sagging moment"):
+            steps = _flange_steps(sheet, model, span)
+            steps.bind(**{n: entries[n] for n in ("A_s", "C_f") if n in entries})
+            length = length_beside_sag(model.forces, span)
+            record_interface(steps, slab, length, block_in_web="C_f" in entries)
+    for face in _faces_with_overhang(model):
+        entries = sheet.entries_of(face.key)
+        with sheet.part(f"interface-{face.key}", f"{face.name.capitalize()}: flange and web"):
+            steps = _flange_steps(sheet, model, face.span)
+            steps.bind(**{n: entries[n] for n in ("n_o", "A_b")})
+            record_interface_top(steps, slab, _to_inflection(model, face.support, face.side))
+
+
+def _flange_steps(sheet: Sheet, model: Model, span: int) -> Steps:
+    place = span_place(sheet, model.inputs, span)
+    place |= {n: sheet.entry(f"{GIVEN}/{n}") for n in ("b_w", "h_f")}
+    place["b"] = place["b_f"]
+    return Steps(sheet, place)
+
+
+def _to_inflection(model: Model, support: int, side: str) -> float:
+    """Return the distance from a face to where the moment of its governing case is zero [mm]."""
+    demand = model.forces.hog(support, "left" if side == "left" else "right")
+    curves = model.forces.solved.solution.span(demand.span)
+    zeros = curves.inflections(demand.row)
+    start, end = model.forces.beam.faces(demand.span)
+    inside: Iterable[float] = [x for x in zeros if start < x < end]
+    apart = [abs(x - demand.x) for x in inside]
+    return min(apart, default=(end - start) / 4)

@@ -1,0 +1,170 @@
+"""The governing tables of the summary: per span and face what governs, asked for and provided."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+
+from lineproof.beams.continuous.flexure import (
+    Face,
+    faces_of,
+    hogging,
+    nominally_simple,
+    sagging_spans,
+)
+from lineproof.beams.continuous.model import ANALYSIS, Model
+from lineproof.beams.continuous.restraint import worst_case
+from lineproof.beams.continuous.symbols import KINDS, code
+from lineproof.record import Entry
+from lineproof.record.printing import in_unit, utilisation
+from lineproof.standards.a23_3 import crack_control, flexure, minimum
+
+FLEXURE = ["Place", "Load case", "M_f, kN.m", "A_sr, mm2", "Bars", "A_s, mm2", "M_r, kN.m", "Ratio"]
+FLEXURE_WIDTHS = (22.0, 40.0, 15.0, 16.0, 34.0, 15.0, 15.0, 13.0)
+SERVICE = ["Place", "Check", "Demand", "Limit", "Ratio"]
+SERVICE_WIDTHS = (40.0, 62.0, 24.0, 24.0, 14.0)
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Row:
+    """A row of a table with the entry it shows."""
+
+    cells: tuple[str, ...]
+    entry: Entry | None
+
+
+def printed(value: float, unit: str, digits: int = 3) -> str:
+    """Return a value as a summary prints it."""
+    return in_unit(value, unit, digits)
+
+
+def ratio_text(check: Entry) -> str:
+    """Return the utilisation of a check, FAILS where it does not hold."""
+    used = utilisation(check)
+    shown = "" if used is None else f"{used:.2f}"
+    if check:
+        return shown if used is None or float(shown) <= 1 else f"{used:.3f}"
+    return f"{shown} FAILS".strip()
+
+
+def flexure_rows(model: Model) -> Iterator[Row]:
+    """Give a row for every span and every face of a support, from left to right."""
+    faces = faces_of(model)
+    spans = set(sagging_spans(model))
+    for span in range(1, model.spans + 1):
+        yield from (
+            _hog(model, face) for face in faces if face.support == span and face.side == "right"
+        )
+        if span in spans:
+            yield _sag(model, span)
+        yield from (
+            _hog(model, face) for face in faces if face.support == span + 1 and face.side == "left"
+        )
+
+
+def _sag(model: Model, span: int) -> Row:
+    entries = model.sheet.entries_of(f"sag-{span}")
+    case = str(model.forces.sag(span).case)
+    return _moment_row(f"span {span}", case, entries, entries, _bars(entries))
+
+
+def _bars(entries: Mapping[str, Entry]) -> str:
+    """Return the bars of a section as noted, without where they come from."""
+    text = str(entries["bars-text"].source.text)
+    head = text.partition(": ")[2]
+    for origin in (", chosen", ", given"):
+        head = head.partition(origin)[0]
+    return head.rstrip(".")
+
+
+def _hog(model: Model, face: Face) -> Row:
+    entries = model.sheet.entries_of(face.key)
+    name = f"support {face.support}, {face.side}"
+    if flexure.STRENGTH.key not in entries:
+        return Row((name, "no tension at the top", "", "", "", "", "", ""), None)
+    if nominally_simple(model, face):
+        case = f"restraint: {model.forces.cases[worst_case(model, face.span)[1]]}"
+    else:
+        case = str(model.forces.hog(face.support, face.side).case)
+    worst = entries if "A_s" in entries else _worst_face(model, face)
+    return _moment_row(name, case, entries, worst, _bars(worst))
+
+
+def _worst_face(model: Model, face: Face) -> Mapping[str, Entry]:
+    """Return the part of the other face, in which the bars of both are recorded."""
+    other = max(
+        (f for f in faces_of(model) if f.support == face.support and f != face),
+        key=lambda f: hogging(model, f),
+    )
+    return model.sheet.entries_of(other.key)
+
+
+def _moment_row(
+    name: str, case: str, own: Mapping[str, Entry], bars: Mapping[str, Entry], text: str
+) -> Row:
+    check = own[flexure.STRENGTH.key]
+    needed = printed(own["A_sr"].value, "mm2") if "A_sr" in own else ""
+    cells = (
+        name, case, printed(own["M_f"].value, "kN.m"), needed, text,
+        printed(bars["A_s"].value, "mm2"), printed(bars["M_r"].value, "kN.m"), ratio_text(check),
+    )  # fmt: skip
+    return Row(cells, check)
+
+
+_SERVICE_CHECKS = (crack_control.CRACKS.key, minimum.BY_AREA.key, minimum.BY_CRACKING.key)
+
+
+def service_rows(model: Model) -> Iterator[Row]:
+    """Give a row for crack control, minimum bars and deflection of every place."""
+    parts = {part.key: part for part in model.sheet.parts}
+    for span in sagging_spans(model):
+        yield from _checks(f"span {span}", parts[f"sag-{span}"].entries)
+    for face in faces_of(model):
+        yield from _checks(f"support {face.support}, {face.side}", parts[face.key].entries)
+    for span in range(1, model.spans + 1):
+        part = parts.get(f"deflection-{span}")
+        for key, entry in (part.entries if part is not None else {}).items():
+            if entry.kind == "check" and key.startswith("deflection"):
+                yield _check_row(f"span {span}", entry, "mm")
+
+
+def _checks(place: str, entries: Mapping[str, Entry]) -> Iterator[Row]:
+    for key in _SERVICE_CHECKS:
+        if key in entries and entries[key].kind == "check":
+            yield _check_row(place, entries[key], entries[key].source.unit)
+
+
+def _check_row(place: str, check: Entry, unit: str) -> Row:
+    left, right = check.value
+    if check.source.sign in (">=", ">"):
+        left, right = right, left
+    shown = tuple(f"{printed(side, unit)} {unit_word(unit)}".strip() for side in (left, right))
+    title = (check.extra or {}).get("title") or check.source.title
+    return Row((place, title, *shown, ratio_text(check)), check)
+
+
+def unit_word(unit: str) -> str:
+    """Return a unit as plain text of a table."""
+    return unit.replace("mm2", "mm²").replace(".", "·")
+
+
+def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
+    """Return the unfactored reactions by load type, for whoever designs what carries the beam."""
+    entries = model.sheet.entries_of(ANALYSIS)
+    kinds = [
+        kind for kind in KINDS if any(f"R_{j}{code(kind)}" in entries for j in _supports(model))
+    ]
+    columns = ["Support", "On", *(f"R, {KINDS[kind]}, kN" for kind in kinds)]
+    rows = []
+    for j in _supports(model):
+        cells, last = [], None
+        for kind in kinds:
+            entry = entries.get(f"R_{j}{code(kind)}")
+            cells.append("" if entry is None else printed(entry.value, "kN"))
+            last = entry if entry is not None else last
+        rows.append(Row((str(j), model.inputs.supports[j - 1].carrier, *cells), last))
+    return columns, rows
+
+
+def _supports(model: Model) -> list[int]:
+    return [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]

@@ -1,0 +1,33 @@
+"""Torques along the beam as the designer types them."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from lineproof.beams.continuous.typed_beam import GRAVITY_TYPES
+from lineproof.beams.inputs import Range, read_in_range
+from lineproof.errors import FaultList, UserError
+from lineproof.quantity import Typed, echo
+
+TORQUE = Range("kN.m", 0, 1000, zero=True)
+KINDS_OF_TORSION = ("compatibility", "equilibrium")
+
+
+def read_torques(name: str, given: object) -> dict[str, Typed]:
+    """Read torques per metre of beam by load type; raises :class:`UserError` with all faults."""
+    if not isinstance(given, Mapping):
+        raise UserError(
+            f"{name}: {echo(given)} is not understood; write the torque per metre of beam by load "
+            "type: {'D': '4.5 kN.m', 'L': '3.0 kN.m'}"
+        )
+    faults, made = FaultList(), {}
+    for kind, text in given.items():
+        if kind not in GRAVITY_TYPES:
+            faults.add(f"{name}: load type {echo(kind)}; write one of {', '.join(GRAVITY_TYPES)}")
+            continue
+        try:
+            made[kind] = read_in_range(f"{name}, {kind}", text, TORQUE)
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+    return made
