@@ -24,6 +24,7 @@ class Parts:
         self.expected: dict[str, str] = {}
         self._parts: dict[str, Part] = {}
         self._stopped: dict[str, str] = {}
+        self._chapter: dict[str, None] | None = None
         self._part: Part | None = None
         self._scope_of_part: dict[str, Any] = {}
 
@@ -37,6 +38,8 @@ class Parts:
             msg = f"part {key!r} opened inside part {self._part.key!r}; close that one first"
             raise UserError(msg)
         check_key(key)
+        if self._chapter is not None:
+            self._chapter[key] = None
         part = Part(key, title)
         self._parts[key] = part
         self._part, self._scope_of_part = part, {}
@@ -68,14 +71,25 @@ class Parts:
                 self._stopped.pop(key, None)
         self.expected = dict(calls)
 
-    def expect_of(self, call: str, keys: Iterable[str]) -> None:
-        """Say which parts one call makes, where that shows only when it is run.
+    @contextmanager
+    def chapter(self, call: str) -> Iterator[None]:
+        """Let every part opened inside belong to one call, whatever parts it comes to make.
 
-        Parts that the call made before and no longer makes are forgotten.
+        Parts that the call made before and does not make now are forgotten.
         """
-        mine = dict.fromkeys(keys, call)
-        kept = {key: other for key, other in self.expected.items() if other != call}
-        self.expect(kept | mine)
+        if self._chapter is not None:
+            raise UserError(f"{call} was called inside a chapter; call it by itself")
+        self._chapter = made = {}
+        try:
+            yield
+        finally:
+            self._chapter = None
+        before = list(self.expected.items())
+        place = next((n for n, (_, other) in enumerate(before) if other == call), len(before))
+        others = [row for row in before if row[1] != call and row[0] not in made]
+        first = sum(row[1] != call and row[0] not in made for row in before[:place])
+        mine = [(key, call) for key in made]
+        self.expect(dict([*others[:first], *mine, *others[first:]]))
 
     @property
     def part_entries(self) -> Mapping[str, Entry]:
@@ -158,7 +172,7 @@ class Parts:
 
     def _keep_apart(self, part: Part) -> None:
         """Refuse in a part of the user's own a symbol that the calculation finds by its name."""
-        if part.key in self.expected:
+        if part.key in self.expected or self._chapter is not None:
             return
         own = {s for s, entry in part.entries.items() if entry.kind in VALUES}
         taken = [

@@ -3,98 +3,123 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
+from dataclasses import replace
 from typing import Any
 
 from lineproof.beams import basics
 from lineproof.beams.continuous import flexure
 from lineproof.beams.continuous import loads as load_take_down
-from lineproof.beams.continuous.coefficients import COEFFICIENTS, record_coefficients
+from lineproof.beams.continuous.anchorage_chapter import COVERAGE, record_anchorage
+from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
-from lineproof.beams.continuous.deflections import record_deflections
+from lineproof.beams.continuous.deflections import SERVICE, record_deflections
 from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
 from lineproof.beams.continuous.geometry import record_spans
 from lineproof.beams.continuous.imported_record import not_covered, record_imported_analysis
 from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
 from lineproof.beams.continuous.model import (
     ANALYSIS,
-    COLUMNS,
     GIVEN,
     LOADS,
     Model,
     model_of,
     span_key,
 )
-from lineproof.beams.continuous.shear_chapter import record_shear
+from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.floor_beam import prepare
 from lineproof.quantity import QuantityInput
 from lineproof.sheet import Sheet
 from lineproof.standards.codes import CodePair
 
+LOADS_CALL, SPANS_CALL, ANALYSIS_CALL = "beam.loads()", "beam.spans()", "beam.analysis()"
+_BEFORE_DESIGN = ("continuous_beam(...)", LOADS_CALL, SPANS_CALL, ANALYSIS_CALL)
+"""Calls whose parts the design rests on."""
 QuantityOrList = QuantityInput | Sequence[QuantityInput]
 
 
 class ContinuousBeam:
     """A beam on a sheet.
 
-    It keeps nothing but the sheet, the checked inputs and the code pair: every number stands on
-    the sheet, so that cells may be run again in any order.
+    Every number stands on the sheet, so that cells may be run again in any order. The beam itself
+    keeps the sheet, the checked inputs and the code pair, and the design it made last, for as long
+    as what that rests on is the same.
     """
 
     def __init__(self, sheet: Sheet, inputs: ContinuousInputs, pair: CodePair) -> None:
         self.sheet, self.inputs, self.pair = sheet, inputs, pair
+        self._last: tuple[tuple[str, ...], Design] | None = None
 
     @property
     def model(self) -> Model:
         """The beam as analysed, from what stands on the sheet."""
         return model_of(self.sheet, self.inputs)
 
+    @property
+    def design(self) -> Design:
+        """Bars and stirrups, given or chosen, from what stands on the sheet."""
+        key = tuple(
+            entry.digest
+            for part in self.sheet.parts
+            if self.sheet.expected.get(part.key) in _BEFORE_DESIGN
+            for entry in part.entries.values()
+        )
+        if self._last is None or self._last[0] != key:
+            self._last = key, design_of(self.model, self.pair)
+        return replace(self._last[1], model=self.model)
+
     def loads(self) -> None:
         """Record the columns that hold the beam and the load take-down."""
-        load_take_down.record_columns(self.sheet, self.inputs)
-        load_take_down.record_loads(self.sheet, self.inputs, self.pair)
+        with self.sheet.chapter(LOADS_CALL):
+            load_take_down.record_columns(self.sheet, self.inputs)
+            load_take_down.record_loads(self.sheet, self.inputs, self.pair)
 
     def spans(self) -> None:
         """Record clear length, effective flange and gross section of every span."""
-        record_spans(self.sheet, self.inputs)
+        with self.sheet.chapter(SPANS_CALL):
+            record_spans(self.sheet, self.inputs)
 
     def analysis(self) -> None:
         """Record support moments and reactions by load type, and the coefficients beside.
 
         With ``forces_csv``, what was brought in and checked instead.
         """
-        if self.inputs.forces_file is not None:
-            record_imported_analysis(self.model)
-            return
-        record_analysis(self.model)
-        if self.model.spans > 1:
-            record_coefficients(self.model)
-
-    def design(self) -> Design:
-        """Return bars and stirrups, given or chosen, from what stands on the sheet."""
-        return design_of(self.model, self.pair)
+        with self.sheet.chapter(ANALYSIS_CALL):
+            if self.inputs.forces_file is not None:
+                record_imported_analysis(self.model)
+                return
+            record_analysis(self.model)
+            if self.model.spans > 1:
+                record_coefficients(self.model)
 
     def flexure(self) -> None:
         """Record bars and resistance at every span and both faces of every support."""
-        design = self.design()
-        model = design.model
+        design = self.design
         sizes = [layer.size for chosen in design.bottom.values() for layer in layers_of(chosen)]
         sizes += [top_of(chosen).web.size for chosen in design.top.values()]
-        record_cover(self.sheet, self.inputs, sizes)
-        for span, chosen in design.bottom.items():
-            flexure.record_sag(model, span, layers_of(chosen), self.pair)
-        for support in range(1, model.spans + 2):
-            if self.inputs.supports[support - 1].kind != "free":
-                bars = top_of(design.top[support]) if support in design.top else None
-                flexure.record_hog(model, support, bars, self.pair)
+        with self.sheet.chapter("beam.flexure()"):
+            record_cover(self.sheet, self.inputs, sizes)
+            for span, chosen in design.bottom.items():
+                flexure.record_sag(design.model, span, layers_of(chosen), self.pair)
+            for support, typed in enumerate(self.inputs.supports, start=1):
+                if typed.kind != "free":
+                    bars = top_of(design.top[support]) if support in design.top else None
+                    flexure.record_hog(design.model, support, bars, self.pair)
 
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""
-        record_shear(self.design())
+        with self.sheet.chapter("beam.shear()"):
+            record_shear(self.design)
 
     def deflections(self) -> None:
         """Record the deflections of every span."""
-        record_deflections(self.model)
+        with self.sheet.chapter("beam.deflections()"):
+            record_deflections(self.model)
+
+    def anchorage(self) -> None:
+        """Record development, hooks, cut-off points, laps, and the cover of all moments by bars."""
+        with self.sheet.chapter("beam.anchorage()"):
+            record_anchorage(self.design)
 
 
 def continuous_beam(
@@ -178,16 +203,16 @@ def member_of(inputs: ContinuousInputs) -> str:
 
 
 def calls_of(inputs: ContinuousInputs) -> dict[str, str]:
-    """Return the call that makes each part, in the order of the calculation."""
-    count = len(inputs.spans)
+    """Return a part of every chapter with the call that makes it, in the order of the calculation.
+
+    Which other parts a call makes shows when it is run.
+    """
     start = "continuous_beam(...)"
-    calls = {GIVEN: start, basics.MATERIALS: start}
-    if any(support.columns for support in inputs.supports):
-        calls[COLUMNS] = "beam.loads()"
-    calls[LOADS] = "beam.loads()"
-    calls |= {span_key(k): "beam.spans()" for k in range(1, count + 1)}
-    calls[ANALYSIS] = "beam.analysis()"
-    if count > 1 and inputs.forces_file is None:
-        calls[COEFFICIENTS] = "beam.analysis()"
-    calls[basics.COVER] = "beam.flexure()"
-    return calls | dict.fromkeys(flexure.part_keys(inputs), "beam.flexure()")
+    calls = {
+        GIVEN: start, basics.MATERIALS: start, LOADS: LOADS_CALL, span_key(1): SPANS_CALL,
+        ANALYSIS: ANALYSIS_CALL, basics.COVER: "beam.flexure()", STIRRUPS: "beam.shear()",
+        SERVICE: "beam.deflections()", COVERAGE: "beam.anchorage()",
+    }  # fmt: skip
+    if inputs.forces_file is not None:
+        del calls[SERVICE]
+    return calls

@@ -13,6 +13,7 @@ from typing import Any
 
 from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.continuous import flexure
+from lineproof.beams.continuous.anchorage import available, has_hooks, hook_at
 from lineproof.beams.continuous.bar_choice import Chosen, TopBars
 from lineproof.beams.continuous.detailing import hook_ties, lay_bars
 from lineproof.beams.continuous.detailing_data import (
@@ -27,7 +28,6 @@ from lineproof.beams.continuous.detailing_given import read_given_runs, section_
 from lineproof.beams.continuous.flexure import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
-from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.beams.continuous.shear_stretches import basis_of, span_numbers, stretches_of
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.standards.codes import CodePair
@@ -69,7 +69,10 @@ def design_of(model: Model, pair: CodePair) -> Design:
     given = _given_runs(model, basis, pair)
     bottom_given, top_given = _given_sections(model, pair, outline, given)
     bottom = flexure.choose_bottom(model, pair, bottom_given)
-    top = flexure.choose_top(model, pair, top_given)
+    bare = Designed(
+        basis, model.forces, SectionBars((), (), HOLDERS), pair, breadths=_breadths(model)
+    )
+    top = flexure.choose_top(model, pair, top_given, lambda j, size: _anchored(bare, j, size))
     flexure.refuse_unfit(bottom, "bottom_bars")
     flexure.refuse_unfit(top, "top_bars")
     designed = Designed(
@@ -87,20 +90,27 @@ def _laid(
     given: tuple[BarRun, ...] | None,
 ) -> Design:
     runs = lay_bars(designed) if given is None else given
-    for _ in range(MOST_ROUNDS):
+    for _ in range(MOST_ROUNDS):  # bars and stirrups settle in two rounds as a rule
         choice = _stirrups(model, designed, runs)
         stirrups = _counted(designed, choice)
         designed = replace(
             designed, shear=stretches_of(choice, designed.outline),
             basis=replace(designed.basis, stirrups=stirrups),
         )  # fmt: skip
-        if given is not None or covered(designed, runs).holds:
+        if given is not None:
             break
         again = lay_bars(designed)
         if again == runs:
             break
         runs = again
     return Design(model, pair, bottom, top, designed, runs, choice)
+
+
+def _anchored(bare: Designed, support: int, size: str) -> bool:
+    """Tell whether top bars of a size can be hooked into an end support, if they end there."""
+    if not bare.exterior(support) or not has_hooks(bare):
+        return True
+    return hook_at(bare, support, size).l_dh <= available(bare, support)
 
 
 def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choice:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass
 
 from lineproof.beams.bars import BarLayer, BarLayers
@@ -19,7 +19,6 @@ from lineproof.beams.continuous.bar_choice import (
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.geometry import span_place
-from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.numbers import Numbers
 from lineproof.beams.continuous.restraint import held_in_frame, record_restraint, restraint_moment
@@ -151,7 +150,13 @@ def choose_bottom(
     return made | dict(zip(sections, found, strict=True))
 
 
-def choose_top(model: Model, pair: CodePair, given: Mapping[int, TopBars]) -> dict[int, Chosen]:
+Anchored = Callable[[int, str], bool]
+"""Tell whether top bars of a size can be anchored in a support."""
+
+
+def choose_top(
+    model: Model, pair: CodePair, given: Mapping[int, TopBars], anchored: Anchored
+) -> dict[int, Chosen]:
     """Return the top bars of every support that has a moment with the top in tension."""
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
@@ -164,7 +169,15 @@ def choose_top(model: Model, pair: CodePair, given: Mapping[int, TopBars]) -> di
             continue
         faces = [top_checks(dict(at), rules, top.web, top.overhang, stirrup) for at in numbers]
         made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))
-    found = choose(list(sections.values()), top_trial(rules, stirrup), "top_bars")
+    numbered = {section.name: support for support, section in sections.items()}
+    search = top_trial(rules, stirrup)
+
+    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+        if not anchored(numbered[section.name], size):
+            return None, "anchorage in the support"
+        return search(section, size)
+
+    found = choose(list(sections.values()), trial, "top_bars")
     return made | dict(zip(sections, found, strict=True))
 
 
@@ -400,17 +413,3 @@ def refuse_unfit(chosen: Mapping[int, Chosen], what: str) -> None:
                 "bars, or a wider web"
             )
     faults.raise_if_any()
-
-
-def part_keys(inputs: ContinuousInputs) -> Iterator[str]:
-    """Give the keys of all parts of flexure, in their order."""
-    count = len(inputs.spans)
-    free = [support.kind == "free" for support in inputs.supports]
-    for span in range(1, count + 1):
-        if not (free[span - 1] or free[span]):
-            yield f"sag-{span}"
-    for support in range(1, count + 2):
-        if not free[support - 1]:
-            sides: tuple[End, ...] = ("left", "right")
-            faces = (Face(support, side) for side in sides)
-            yield from (face.key for face in faces if 1 <= face.span <= count)

@@ -39,23 +39,7 @@ from lineproof.standards.a23_3 import bars
 from lineproof.standards.a23_3.bars import BARS
 
 STIRRUPS = "stirrups"
-CALL = "beam.shear()"
 _SAME = 1e-9
-
-
-def part_keys(design: Design) -> list[str]:
-    """Return the keys of the parts of this chapter, in order."""
-    model = design.model
-    keys = [STIRRUPS]
-    if model.inputs.torques:
-        keys += [f"torsion-{k}" for k in range(1, model.spans + 1)]
-    keys += [section.key for row in design.stirrups.sections for section in row]
-    supports = enumerate(model.inputs.supports, start=1)
-    keys += [f"support-{j}" for j, s in supports if s.kind != "free"]
-    if model.inputs.slab_bars is not None and model.inputs.slab:
-        keys += [f"interface-{k}" for k in design.bottom]
-        keys += [f"interface-{f.key}" for f in _faces_with_overhang(model)]
-    return keys
 
 
 def _faces_with_overhang(model: Model) -> list[FaceOfSupport]:
@@ -73,7 +57,6 @@ def record_shear(design: Design) -> None:
     """Record stirrups, torsion, the sections of every span, supports and the flange."""
     model, choice = design.model, design.stirrups
     sheet = model.sheet
-    sheet.expect_of(CALL, part_keys(design))
     with sheet.part(STIRRUPS, "Stirrups"):
         alike = record_stirrups(Steps(sheet, {}), choice, design.outline)
     torsion = _record_torsion(design, alike)
