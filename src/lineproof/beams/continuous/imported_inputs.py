@@ -71,16 +71,19 @@ def _read_if_given(name: str, path: object, faults: FaultList) -> bytes | None:
 def read_bytes(name: str, given: object) -> bytes:
     """Return the content of a file named by an input; raises :class:`UserError`."""
     path = _path(name, given)
-    if not path.is_file():
-        raise UserError(
-            f"{name}: {echo(str(given))}: no such file; write its path from the folder of the "
-            "notebook, like 'frame.csv'"
-        )
     try:
+        if not path.is_file():
+            raise UserError(
+                f"{name}: {echo(str(given))}: no such file; write its path from the folder of the "
+                "notebook, like 'frame.csv'"
+            )
         with path.open("rb") as stream:
             content = stream.read(MOST_BYTES + 1)
     except OSError as error:
-        raise UserError(f"{name}: {echo(str(given))} cannot be read: {error.strerror}") from None
+        raise UserError(
+            f"{name}: {echo(str(given))} cannot be read: {error.strerror}; write the path of a "
+            "file like 'frame.csv'"
+        ) from None
     if len(content) > MOST_BYTES:
         raise UserError(
             f"{name}: {echo(str(given))} is larger than {MOST_BYTES // 1_000_000} MB; export fewer "
