@@ -17,7 +17,7 @@ from hypothesis import strategies as st
 from lineproof.beams.analysis.curves import Floats, Side
 from lineproof.beams.analysis.model import Load
 from lineproof.beams.continuous.layout import StirrupZone
-from lineproof.beams.continuous.shear_choice import RESERVE, Fitting, choose_layouts
+from lineproof.beams.continuous.shear_choice import RESERVE, Fitting, choose_layouts, fit_layout
 from lineproof.beams.continuous.shear_numbers import ShearBasis
 from lineproof.beams.continuous.shear_state import STEP, SpanState, span_state
 from lineproof.beams.continuous.stirrups import SpanLayout, grid, lay
@@ -293,6 +293,51 @@ def test_reasons_say_what_governs() -> None:
     # 200 x 400/(0.06 sqrt(32) 600) = 80000/203.65 = 393 mm
     [reason] = wide.reasons
     assert reason == "Span 1, middle: 375 mm; the minimum stirrups stand at 393 mm (11.2.8.2)."
+
+
+def asked(required: dict[float, float], allowed: float = 600.0) -> Fitting:
+    """Return a span of 6 m and 600 mm depth that asks for 1/s up to each station, then less."""
+    u = np.arange(0.0, 6001.0, 50.0)
+    wanted = np.zeros(len(u))
+    for end, one in sorted(required.items(), reverse=True):
+        wanted[u <= end] = one
+    return Fitting(6000.0, 600.0, 11.3, u, wanted, np.full(len(u), allowed), 1.0)
+
+
+def test_an_end_zone_reaches_half_a_depth_past_its_need() -> None:
+    """1/150 is asked for up to 500 mm; 150 mm must stand whole there: to 500 + 600/2 = 800 mm.
+
+    Stirrups from 75 mm on: 75 + 5 x 150 = 825 mm. With 4 spaces the zone would end at 675 mm,
+    past the need, but at 500 mm only (0.5 + 175/600)/150 + (0.5 - 175/600)/300 would count.
+    """
+    fit = asked({500.0: 1 / 150}, allowed=300.0)
+    layout = fit_layout(fit, fit.run(300.0), 150.0, 300.0)
+    assert (layout.left, layout.right) == (5, 0)
+    assert layout.left_end == 825.0
+    # closer stirrups than asked for may count less: 1/175 = 0.00571; 4 spaces count 0.00597
+    fit = asked({500.0: 1 / 175}, allowed=300.0)
+    assert fit_layout(fit, fit.run(300.0), 150.0, 300.0).left == 4
+
+
+def test_the_wide_spacing_stands_where_it_reaches_farthest() -> None:
+    """Wide stirrups would do up to 300 mm and from 1000 mm on; they stand in the longer stretch."""
+    u = np.arange(0.0, 6001.0, 50.0)
+    wanted = np.where((u > 300) & (u < 1000), 1 / 200, 1 / 600)
+    fit = Fitting(6000.0, 600.0, 11.3, u, wanted, np.full(len(u), 600.0), 1.0)
+    assert fit.run(300.0) == (1000.0, 6000.0)
+    layout = fit_layout(fit, fit.run(300.0), 150.0, 300.0)
+    assert layout.left_end >= 1000.0
+    assert layout.right == 0
+
+
+def test_both_sides_of_a_point_load_are_stations() -> None:
+    """V jumps by 1.4 x 100 kN at 2345 mm in the case 1.4D."""
+    case = case_of((6000.0,), [*uniform((6000.0,), 20, 0), point(1, 100e3, 2345.0)])
+    [state] = states_of(case, BASIS)
+    columns = [n for n, x in enumerate(state.columns) if x == 2345.0]
+    assert [state.sides[n] for n in columns] == ["left", "right"]
+    left, right = (state.v["V"][0, n] for n in columns)
+    assert left - right == pytest.approx(1.4 * 100e3)
 
 
 def test_stations_are_fifty_millimetres_apart() -> None:

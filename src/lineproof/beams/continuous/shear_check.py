@@ -195,7 +195,7 @@ class SpanCheck:
         numbers = self.state.numbers
         column = 0 if end == "left" else -1
         near = numbers.left if end == "left" else numbers.right
-        if near.held != "direct" or self.critical(end).reason[row]:
+        if self.critical(end).reason[row]:
             return None
         return numbers.A_sr if self.state.v["bottom"][row, column] else near.A_sr
 
