@@ -168,7 +168,7 @@ def _origins(
         Origin(source, labels.get(source, ""), _traced(name, source, notation))
         for name, source in args.items()
         # A figure or table names what it rests on by id; there is no symbol in it to trace.
-        if source in labels and "/" not in name
+        if source in labels and name.isidentifier()
     )
 
 

@@ -13,6 +13,7 @@ from lineproof.beams.continuous.anchorage_chapter import COVERAGE, record_anchor
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
 from lineproof.beams.continuous.deflections import SERVICE, record_deflections
+from lineproof.beams.continuous.deliverables import SCHEDULE, record_schedule
 from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
 from lineproof.beams.continuous.geometry import record_spans
 from lineproof.beams.continuous.imported_record import not_covered, record_imported_analysis
@@ -27,6 +28,7 @@ from lineproof.beams.continuous.model import (
 )
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
+from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
 from lineproof.beams.floor_beam import prepare
 from lineproof.quantity import QuantityInput
 from lineproof.sheet import Sheet
@@ -121,6 +123,16 @@ class ContinuousBeam:
         with self.sheet.chapter("beam.anchorage()"):
             record_anchorage(self.design)
 
+    def schedule(self) -> None:
+        """Record bar schedule, bends, stirrup schedule and quantities."""
+        with self.sheet.chapter("beam.schedule()"):
+            record_schedule(self.design)
+
+    def summary(self) -> None:
+        """Record the summary pages: drawings, governing tables, reactions, envelopes."""
+        with self.sheet.chapter("beam.summary()"):
+            record_summary(self.design)
+
 
 def continuous_beam(
     sheet: Sheet,
@@ -212,6 +224,7 @@ def calls_of(inputs: ContinuousInputs) -> dict[str, str]:
         GIVEN: start, basics.MATERIALS: start, LOADS: LOADS_CALL, span_key(1): SPANS_CALL,
         ANALYSIS: ANALYSIS_CALL, basics.COVER: "beam.flexure()", STIRRUPS: "beam.shear()",
         SERVICE: "beam.deflections()", COVERAGE: "beam.anchorage()",
+        SCHEDULE: "beam.schedule()", SUMMARY: "beam.summary()",
     }  # fmt: skip
     if inputs.forces_file is not None:
         del calls[SERVICE]

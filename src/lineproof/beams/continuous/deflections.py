@@ -88,8 +88,8 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
         span,
         {name: place[name] for name in _SPAN},
         midspan,
-        _top_at(model, span, "right"),
-        _top_at(model, span + 1, "left"),
+        top_at(model, span, "right"),
+        top_at(model, span + 1, "left"),
         free,
         behind,
         None if behind is None else model.lengths[behind - 1],
@@ -98,7 +98,7 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
     )
 
 
-def _top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
+def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
     """Return d and A_s of the top bars at a continuous end; None at a simple or free end."""
     kind = model.inputs.supports[support - 1].kind
     exterior = support in (1, model.spans + 1)

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 
+from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.flexure import (
     Face,
     faces_of,
@@ -17,11 +18,14 @@ from lineproof.beams.continuous.restraint import worst_case
 from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit, utilisation
-from lineproof.standards.a23_3 import crack_control, flexure, minimum
+from lineproof.standards.a23_3 import crack_control, flexure, minimum, shear
 
 FLEXURE = ["Place", "Load case", "M_f, kN.m", "A_sr, mm2", "Bars", "A_s, mm2", "M_r, kN.m", "Ratio"]
 FLEXURE_WIDTHS = (22.0, 40.0, 15.0, 16.0, 34.0, 15.0, 15.0, 13.0)
+SHEAR = ["Place", "Load case", "Stirrups", "V_f, kN", "V_c, kN", "V_s, kN", "V_r, kN", "Ratio"]
+SHEAR_WIDTHS = (34.0, 40.0, 24.0, 15.0, 15.0, 15.0, 15.0, 13.0)
 SERVICE = ["Place", "Check", "Demand", "Limit", "Ratio"]
+PAIR = 2
 SERVICE_WIDTHS = (40.0, 62.0, 24.0, 24.0, 14.0)
 
 
@@ -109,6 +113,24 @@ def _moment_row(
         printed(bars["A_s"].value, "mm2"), printed(bars["M_r"].value, "kN.m"), ratio_text(check),
     )  # fmt: skip
     return Row(cells, check)
+
+
+def shear_rows(design: Design) -> Iterator[Row]:
+    """Give a row for every section of shear that is printed."""
+    sheet = design.model.sheet
+    for section in (each for row in design.stirrups.sections for each in row):
+        entries = sheet.entries_of(section.key)
+        check = entries.get(shear.STRENGTH.key)
+        forces = ("V_f", "V_c", "V_s", "V_r")
+        values = [printed(entries[n].value, "kN") if n in entries else "" for n in forces]
+        place = f"span {section.span}, {section.end} end"
+        if section.place == "station":
+            place = f"span {section.span}, {section.distance / 1000:.2f} m from {section.end}"
+        basis = design.stirrups.basis
+        legs = "" if basis.legs == PAIR else f"{basis.legs} legs "
+        spaced = f"{legs}{basis.stirrup} at {section.spacing:g}" if not section.plain else "none"
+        ratio = ratio_text(check) if check is not None else "FAILS"
+        yield Row((place, str(section.demand.case), spaced, *values, ratio), check)
 
 
 _SERVICE_CHECKS = (crack_control.CRACKS.key, minimum.BY_AREA.key, minimum.BY_CRACKING.key)

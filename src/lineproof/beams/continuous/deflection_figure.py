@@ -1,0 +1,88 @@
+"""The figure of deflected shapes: what stands on the sheet, bent by curvature along the spans."""
+
+from __future__ import annotations
+
+from lineproof.beams.continuous.deflection import (
+    Behind,
+    History,
+    Place,
+    SpanSection,
+    deflections,
+)
+from lineproof.beams.continuous.deflection_service import STAGES, free_end, span_behind
+from lineproof.beams.continuous.deflection_shapes import deflected_shapes
+from lineproof.beams.continuous.deflections import service_of, top_at
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.figure_deflection import (
+    DeflectionCurve,
+    DeflectionPiece,
+    deflection_figure,
+)
+from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.model import Model
+from lineproof.drawing import Figure
+from lineproof.errors import UserError
+
+_NAMES = ("immediate, dead and live load", "after attachment", "total, long term")
+
+
+def deflection_shapes_figure(design: Design) -> Figure | None:
+    """Return the figure, or None where deflections are not calculated for every span."""
+    model = design.model
+    if model.inputs.forces_file is not None:
+        return None
+    pieces: dict[str, list[DeflectionPiece]] = {name: [] for name in _NAMES}
+    behind: dict[int, Behind] = {}
+    order = sorted(range(1, model.spans + 1), key=model.forces.beam.cantilever)
+    found: dict[int, tuple[DeflectionPiece, ...]] = {}
+    for span in order:
+        try:
+            found[span] = _pieces(design, span, behind)
+        except UserError:
+            return None
+    for span in range(1, model.spans + 1):
+        for name, piece in zip(_NAMES, found[span], strict=True):
+            pieces[name].append(piece)
+    curves = [DeflectionCurve(name, pieces[name]) for name in _NAMES]
+    return deflection_figure(
+        design.outline, curves, "Deflected shapes, by curvature along the spans, for information"
+    )
+
+
+def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[DeflectionPiece, ...]:
+    model = design.model
+    section = _section(model, span, behind)
+    service = service_of(model, span)
+    moments = {stage: service.stages[stage] for stage in STAGES}
+    made = deflections(section, moments, carries=model.inputs.carries, history=History())
+    behind[span] = Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})
+    shapes = deflected_shapes(section, moments, made)
+    x = (shapes.x + design.outline.axes[span - 1]).tolist()
+    return tuple(
+        DeflectionPiece(span, x, w.tolist())
+        for w in (shapes.immediate, shapes.attached, shapes.total)
+    )
+
+
+def _section(model: Model, span: int, behind: dict[int, Behind]) -> SpanSection:
+    sheet, find = model.sheet, model.sheet.find
+    place = {n: e.value for n, e in span_place(sheet, model.inputs, span).items()}
+    free = free_end(model.forces.beam, span)
+    b_w = find("b_w").value
+    midspan = None
+    if not free:
+        sag = sheet.entries_of(f"sag-{span}")
+        midspan = Place(place.get("b_f", b_w), sag["d"].value, sag["A_s"].value)
+    before = span_behind(model.forces.beam, span) if free else None
+    return SpanSection(
+        place["l"], place["l_n"], place["h"], b_w,
+        find("h_f").value if model.inputs.slab else 0.0, place["I_g"], place["y_b"],
+        find("f_r").value, find("E_c").value, find("E_s").value, midspan,
+        _top(model, b_w, span, "right"), _top(model, b_w, span + 1, "left"), free,
+        None if before is None else behind[before],
+    )  # fmt: skip
+
+
+def _top(model: Model, b_w: float, support: int, side: str) -> Place | None:
+    bound = top_at(model, support, side)
+    return None if bound is None else Place(b_w, bound["d"].value, bound["A_s"].value)

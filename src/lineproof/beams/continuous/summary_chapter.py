@@ -1,0 +1,201 @@
+"""The summary pages of a beam: drawings, governing tables, loads, reactions, envelopes."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Sequence
+
+import numpy as np
+
+from lineproof.beams.continuous.deflection_figure import deflection_shapes_figure
+from lineproof.beams.continuous.deliverables import record_drawings
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.figure_along import in_figures
+from lineproof.beams.continuous.figure_envelope import (
+    MomentPiece,
+    ShearPiece,
+    moment_figure,
+    shear_figure,
+)
+from lineproof.beams.continuous.figure_loads import loads_figure
+from lineproof.beams.continuous.model import GIVEN, LOADS, Model
+from lineproof.beams.continuous.resistance import provide, stand
+from lineproof.beams.continuous.resistance_demand import stretch_at
+from lineproof.beams.continuous.summary_tables import (
+    FLEXURE,
+    FLEXURE_WIDTHS,
+    SERVICE,
+    SERVICE_WIDTHS,
+    SHEAR,
+    SHEAR_WIDTHS,
+    Row,
+    flexure_rows,
+    printed,
+    reaction_table,
+    service_rows,
+    shear_rows,
+    unit_word,
+)
+from lineproof.beams.continuous.symbols import KINDS
+from lineproof.drawing import Figure, to_json
+from lineproof.record import Entry
+from lineproof.record.entry import VALUES
+from lineproof.sheet import Sheet
+
+SUMMARY = "summary"
+DRAWN, TABLES, TAKE_DOWN, REACTIONS, ALONG = 10, 20, 30, 40, 50
+"""Places on the summary pages; the schedules stand behind them."""
+PIECES = 100
+CSV_PIECES = 20
+_ENVELOPE = [
+    "Span",
+    "x, m",
+    "M, largest, kN.m",
+    "M, smallest, kN.m",
+    "V, largest, kN",
+    "V, smallest, kN",
+]
+_LOADS = ["Load", "Value"]
+
+
+def record_summary(design: Design) -> None:
+    """Record the summary: what governs everywhere, drawn and in tables."""
+    model = design.model
+    sheet = model.sheet
+    with sheet.part(SUMMARY, "Summary of the beam"):
+        record_drawings(design, DRAWN)
+        for number, (key, title, columns, widths, rows) in enumerate(_tables(design)):
+            _table(sheet, key, title, columns, rows, TABLES + number, widths=widths)
+        _record_loads(model)
+        columns, rows = reaction_table(model)
+        _table(sheet, "reactions", "Reactions, unfactored, by load type", columns, rows, REACTIONS,
+               csv="reactions")  # fmt: skip
+        _record_envelopes(design)
+
+
+def _tables(
+    design: Design,
+) -> Iterator[tuple[str, str, list[str], Sequence[float], Iterable[Row]]]:
+    yield "flexure", "Flexure: what governs", FLEXURE, FLEXURE_WIDTHS, flexure_rows(design.model)
+    yield "shear", "Shear: what governs", SHEAR, SHEAR_WIDTHS, shear_rows(design)
+    yield (
+        "service", "Cracks, minimum bars, deflections", SERVICE, SERVICE_WIDTHS,
+        service_rows(design.model),
+    )  # fmt: skip
+
+
+def _table(
+    sheet: Sheet,
+    key: str,
+    title: str,
+    columns: list[str],
+    rows: Iterable[Row],
+    front: int,
+    *,
+    csv: str = "",
+    widths: Sequence[float] = (),
+) -> None:
+    kept = list(rows)
+    sheet.table(
+        key, columns, [list(row.cells) for row in kept], title=title,
+        lines=[row.entry for row in kept], front=front, csv=csv, widths=widths,
+    )  # fmt: skip
+
+
+def _record_loads(model: Model) -> None:
+    sheet = model.sheet
+    names = {kind: words for kind, words in KINDS.items() if kind in model.kinds()}
+    loads = sheet.entries_of(LOADS)
+    shown = [e for e in loads.values() if e.kind in VALUES and e.symbol.startswith(("w_", "P_"))]
+    if model.forces.loads:
+        figure = loads_figure(
+            [entry.value for entry in model.lengths], model.forces.beam.supports,
+            model.forces.loads, names,
+        )  # fmt: skip
+        _figure(sheet, "loads", figure, TAKE_DOWN, shown)
+    rows = [
+        Row((_title(entry), f"{printed(entry.value, entry.unit)} {unit_word(entry.unit)}"), entry)
+        for entry in shown
+    ]
+    _table(sheet, "take-down", "Load take-down", _LOADS, rows, TAKE_DOWN + 1, widths=(110.0, 30.0))
+
+
+def _title(entry: Entry) -> str:
+    title = str((entry.extra or {}).get("title") or entry.source.title)
+    return title[0].upper() + title[1:]
+
+
+def _figure(sheet: Sheet, key: str, figure: Figure, front: int, rests: Iterable[Entry]) -> None:
+    sheet.figure(
+        key, to_json(figure), title=figure.caption, alt=figure.alt, rests_on=rests, front=front
+    )
+
+
+def _record_envelopes(design: Design) -> None:
+    """Record moment and shear envelopes with the resistance laid over, and deflected shapes."""
+    model, sheet = design.model, design.model.sheet
+    rests = [*model.lengths, *(p.entries["M_f"] for p in sheet.parts if "M_f" in p.entries)]
+    standing = stand(design.designed, design.runs)
+    moments, shears = [], []
+    for span in range(1, model.spans + 1):
+        left = design.outline.axes[span - 1]
+        local = np.linspace(0.0, model.lengths[span - 1].value, PIECES + 1)
+        M, V = model.forces.along(span, local)
+        spans = np.full(len(local), span)
+        bottom, top = (
+            provide(design.designed, standing, face, local + left, spans).M_r
+            for face in ("bottom", "top")
+        )
+        V_r = [stretch_at(design.designed, x).V_r for x in (local + left).tolist()]
+        x = (local + left).tolist()
+        moments.append(
+            MomentPiece(span, x, M.max(0).tolist(), M.min(0).tolist(), bottom.tolist(),
+                        top.tolist())
+        )  # fmt: skip
+        shears.append(ShearPiece(span, x, V.max(0).tolist(), V.min(0).tolist(), V_r))
+    for number, part in enumerate(in_figures(moments), start=1):
+        _figure(sheet, f"moments-{number}", moment_figure(design.outline, part), ALONG, rests)
+    for number, each in enumerate(in_figures(shears), start=1):
+        figure = shear_figure(design.outline, each, stations=_critical(design))
+        _figure(sheet, f"shears-{number}", figure, ALONG + 1, rests)
+    shapes = deflection_shapes_figure(design)
+    if shapes is not None:
+        _figure(sheet, "deflected", shapes, ALONG + 2, rests)
+    _record_stations(model)
+
+
+def _critical(design: Design) -> list[float]:
+    """Return the sections at the supports that shear is designed at, along the beam."""
+    return [
+        design.outline.axes[s.span - 1] + s.demand.x
+        for row in design.stirrups.sections
+        for s in row
+        if s.place != "station"
+    ]
+
+
+def _record_stations(model: Model) -> None:
+    """Record the envelopes at stations, for the CSV file and the working."""
+    rows = []
+    for span in range(1, model.spans + 1):
+        x = np.linspace(0.0, model.lengths[span - 1].value, CSV_PIECES + 1)
+        M, V = model.forces.along(span, x)
+        M_left, V_left = model.forces.along(span, x, "left")
+        for i, at in enumerate(x.tolist()):
+            values = (
+                (max(M[:, i].max(), M_left[:, i].max()), "kN.m"),
+                (min(M[:, i].min(), M_left[:, i].min()), "kN.m"),
+                (max(V[:, i].max(), V_left[:, i].max()), "kN"),
+                (min(V[:, i].min(), V_left[:, i].min()), "kN"),
+            )
+            shown = [_number(value, unit) for value, unit in values]
+            rows.append([str(span), f"{at / 1000:.3f}", *shown])
+    model.sheet.table(
+        "envelope", _ENVELOPE, rows, title="Envelopes of factored moments and shears",
+        rests_on=[*model.lengths, *model.sheet.entries_of(GIVEN).values()][: len(model.lengths)],
+        csv="envelopes",
+    )  # fmt: skip
+
+
+def _number(value: float, unit: str) -> str:
+    small = abs(value) < (1e3 if unit == "kN.m" else 1.0)
+    return "0" if small else printed(float(value), unit, 4)
