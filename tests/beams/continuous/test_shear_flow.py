@@ -36,6 +36,7 @@ def test_shear_with_forces_line_by_line(changes: Mapping[str, Any]) -> None:
     """M_f and V_f by the statics of the case are those that the stirrups were chosen by."""
     beam = analysed(**changes)
     model, sheet = beam.model, beam.sheet
+    sheet.expected = {}  # the parts of shear are made here, not by the chapter
     outline = outline_of(sheet, beam.inputs)
     names = ("b_w", "f_c", "f_y", "phi_c", "phi_s", "lambda_", "a_max", "c_c")
     basis = ShearBasis(*(sheet.find(name).value for name in names))

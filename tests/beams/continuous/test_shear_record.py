@@ -5,10 +5,17 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import Any
 
+import numpy as np
 import pytest
 
 from lineproof.beams.analysis.model import Load, PartialLoad
-from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd
+from lineproof.beams.continuous.shear_numbers import (
+    ShearBasis,
+    SpanEnd,
+    Stretch,
+    area_at,
+    depth_at,
+)
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.record import Record
@@ -147,6 +154,23 @@ def test_where_the_moment_changes_sign_the_smaller_depth_counts() -> None:
     for critical in (state.left, state.right):
         for mixed, d, M in zip(critical.mixed, critical.d, critical.M, strict=True):
             assert d == (500.0 if mixed or M >= 0 else 560.0)
+
+
+def test_bars_count_where_they_stand() -> None:
+    """Where stretches meet the smaller area counts, outside of them none; depth of the nearest."""
+    bars = (
+        Stretch(0, 1000, 2000, 560),
+        Stretch(1000, 2000, 1000, 550),
+        Stretch(2600, 3000, 500, 540),
+    )
+    x = np.array([-5.0, 0, 500, 999.9, 1000, 1500, 2000, 2200, 2400, 2600, 3000, 3001])
+    areas = [0, 2000, 2000, 2000, 1000, 1000, 1000, 0, 0, 500, 500, 0]
+    assert area_at(bars, x).tolist() == areas
+    depths = [560, 560, 560, 560, 550, 550, 550, 550, 540, 540, 540, 540]
+    assert depth_at(bars, x).tolist() == depths
+    one = (Stretch(0, 1000, 2000, 560),)
+    assert area_at(one, np.array([1000.0, 1001.0])).tolist() == [2000, 0]
+    assert depth_at(one, np.array([5000.0])).tolist() == [560]
 
 
 def test_stirrups_as_given_fail_their_check() -> None:

@@ -115,20 +115,33 @@ class SpanNumbers:
 
 
 def area_at(bars: Sequence[Stretch], x: Floats) -> Floats:
-    """Return the area of the bars of a face at stations; where stretches meet, the smaller."""
+    """Return the area of the bars of a face at stations; where stretches meet, the smaller.
+
+    The stretches stand in order from left to right and do not overlap.
+    """
+    start, end, area, _ = _table(bars)
+    at = np.clip(np.searchsorted(start, x, side="right") - 1, 0, None)
     found = np.full(np.shape(x), np.inf)
-    for stretch in bars:
-        inside = (x >= stretch.start) & (x <= stretch.end)
-        found = np.where(inside, np.minimum(found, stretch.A_s), found)
+    for n in (at, np.maximum(at - 1, 0)):
+        inside = (x >= start[n]) & (x <= end[n])
+        found = np.where(inside, np.minimum(found, area[n]), found)
     return np.where(np.isinf(found), 0.0, found)
 
 
 def depth_at(bars: Sequence[Stretch], x: Floats) -> Floats:
     """Return the depth to the bars of a face at stations; outside them that of the nearest."""
-    apart = np.array([np.maximum(s.start - x, x - s.end) for s in bars])
-    depths = np.array([s.d for s in bars])
-    found: Floats = depths[apart.argmin(axis=0)]
-    return found
+    start, end, _, depth = _table(bars)
+    at = np.clip(np.searchsorted(start, x, side="right") - 1, 0, None)
+    after = np.minimum(at + 1, len(start) - 1)
+    nearer_after = (x > end[at]) & (start[after] - x < x - end[at])
+    made: Floats = np.where(nearer_after & (after > at), depth[after], depth[at])
+    return made
+
+
+def _table(bars: Sequence[Stretch]) -> Floats:
+    """Return starts, ends, areas and depths as rows."""
+    made: Floats = np.array([(s.start, s.end, s.A_s, s.d) for s in bars]).T
+    return made
 
 
 def check_basis(basis: ShearBasis) -> None:
