@@ -23,7 +23,6 @@ from lineproof.beams.analysis.model import (
 from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.imported_forces import ForcesFile, ImportedForces, imported_forces
 from lineproof.beams.continuous.imported_restraint import span_loads
-from lineproof.beams.continuous.imported_torsion import has_torsion, imported_torsion
 from lineproof.beams.continuous.shear_state import near_point_loads
 from lineproof.errors import UserError
 
@@ -168,15 +167,15 @@ def test_load_on_a_span_with_its_point_loads_twice() -> None:
 def test_torsion_is_taken_on_the_straight_line() -> None:
     """T from 30 kN.m at the left axis to -30 kN.m at the right: at 2.1 m of 8 m 30 - 15.75."""
     found = again(two_spans(), torsion=lambda span, x: 30.0 - 7.5 * x / 1e3 if span == 1 else 0.0)
-    assert has_torsion(found, 1)
-    assert not has_torsion(found, 2)
+    assert found.has_torsion(1)
+    assert not found.has_torsion(2)
     at = np.array([0.0, 2100.0, 8000.0])
-    T = imported_torsion(found, 1, at)
+    T = found.imported_torsion(1, at)
     assert T.shape == (len(found.cases), 3)
     assert np.abs(T - np.array([30e6, 14.25e6, -30e6])).max() < 1e-3
     each = np.tile(at, (len(found.cases), 1))
-    assert np.array_equal(imported_torsion(found, 1, each), T)
-    assert not imported_torsion(found, 2, at).any()
+    assert np.array_equal(found.imported_torsion(1, each), T)
+    assert not found.imported_torsion(2, at).any()
 
 
 def test_larger_torsion_counts_where_it_jumps() -> None:
@@ -185,7 +184,7 @@ def test_larger_torsion_counts_where_it_jumps() -> None:
                                           (5, -9), (6, -9), (7, -9), (8, -9))
     ]  # fmt: skip
     forces = read(Beam((Span(8000.0, 1e13),), (COLUMN, COLUMN)), rows)
-    found = imported_torsion(forces, 1, np.array([3999.0, 4000.0, 4001.0]))
+    found = forces.imported_torsion(1, np.array([3999.0, 4000.0, 4001.0]))
     assert found[0].tolist() == pytest.approx([5e6, -9e6, -9e6])
 
 

@@ -14,7 +14,7 @@ from lineproof import beams
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.flexure import faces_of, sagging_spans
 from lineproof.beams.continuous.forces import Demand
-from lineproof.beams.continuous.imported_torsion import imported_torsion, record_imported_torsion
+from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
@@ -232,13 +232,43 @@ def test_torsion_of_a_case_is_recorded(
         record_imported_torsion(steps, forces, demand, near)
         T_f = steps.place["T_f"].value
     assert T_f == pytest.approx((30 - 60 * x / 7600) * 1e6, abs=2.0)
-    assert abs(imported_torsion(forces, 1, np.array([x]))[2, 0]) == pytest.approx(T_f, rel=EQUAL)
+    assert abs(forces.imported_torsion(1, np.array([x]))[2, 0]) == pytest.approx(T_f, rel=EQUAL)
     record = close_anyway(model.sheet)
     assert recompute(record) == []
     assert list(faults(record.data)) == []
-    assert {"check": "Torsion: T of the imported cases", "clause": "11.3.10"} in (
-        record.data["status"]["not_covered"]
+
+
+def test_imported_torsion_is_designed_for(tmp_path: Path, own: beams.ContinuousBeam) -> None:
+    """T linear from 30 to -30 kN.m over each span: closed stirrups, T_f of the straight line.
+
+    At d_v from the left face of span 1, x from the axis of 7.6 m: 30 - 60 x/7.6.
+    """
+    lengths = {1: 7600.0, 2: 9200.0, 3: 7600.0}
+    rows = frame_files.rows_of(
+        own.model.forces, torsion=lambda span, at: round(30.0 - 60.0 * at / lengths[span], 6)
     )
+    path = frame_files.write(tmp_path / "frame.csv", rows)
+    more = {"torsion": "equilibrium", "closed_stirrups": True}
+    beam = analysed(forces_csv=path, **more)
+    beam.flexure()
+    beam.shear()
+    record = record_so_far(beam)
+    sections = [i.partition("/")[0] for i in record.entries if i.endswith("/T_f")]
+    assert len(sections) >= 6
+    for part in sections:
+        x = value(record, f"{part}/x_f" if f"{part}/x_s" not in record.entries else f"{part}/x_s")
+        length = lengths[int(part.split("-")[1])] / 1000
+        assert value(record, f"{part}/T_f") == pytest.approx(abs(30 - 60 * x / length), abs=1e-4)
+    assert record.entries["shear-1-left/torsion-counts"]["holds"]
+    assert "is that of the frame analysis" in texts(record, "torsion-1")
+    assert recompute(record) == []
+    assert list(faults(record.data)) == []
+
+
+def test_torques_beside_a_file_are_refused(files: dict[str, Any]) -> None:
+    found = refused(lambda: start(**files, torques={"D": "4 kN.m"}))
+    assert len(found) == 1
+    assert found[0].startswith("torques: with forces_csv torsion is the column T of the file")
 
 
 # -- what stands on the page ----------------------------------------------------------------------
@@ -261,7 +291,6 @@ def test_the_page_says_where_the_forces_come_from(files: dict[str, Any]) -> None
     assert "coefficients/coefficients" not in record.entries
     missing = {row["check"] for row in record.data["status"]["not_covered"]}
     assert any(check.startswith("Deflections") for check in missing)
-    assert not any(check.startswith("Torsion") for check in missing)
     # 7.6 m at 1.25D + 1.5L on every span: the load of the file is that of the take-down.
     rows = record.entries["analysis/imported-loads"]["rows"]
     assert [row[-1] for row in rows] == ["1.00"] * 3

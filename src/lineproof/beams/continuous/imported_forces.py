@@ -130,6 +130,29 @@ class ImportedForces(Forces):
             return next((p for p in pieces if x <= p.x_j + AT), pieces[-1])
         return next((p for p in reversed(pieces) if x >= p.x_i - AT), pieces[0])
 
+    def has_torsion(self, span: int) -> bool:
+        """Tell whether the file gives a span any torsion."""
+        columns = [c for p in self.pieces[span - 1] for c in (p.i, p.j)]
+        return bool(self.source.imported.T[:, columns].any())
+
+    def imported_torsion(self, span: int, at: Floats) -> Floats:
+        """Return T of every case [N.mm], with its sign: (cases, places).
+
+        ``at`` holds places from the left axis of the span [mm]: (places,), or (cases, places)
+        where each case has its own. Between two stations T is linear; where a station is written
+        twice the larger counts.
+        """
+        T = self.source.imported.T
+        places = np.broadcast_to(at, (len(T), np.shape(at)[-1]))
+        made = np.zeros(places.shape)
+        for piece in self.pieces[span - 1]:
+            share = (places - piece.x_i) / (piece.x_j - piece.x_i)
+            here = (places >= piece.x_i - AT) & (places <= piece.x_j + AT)
+            T_i, T_j = T[:, [piece.i]], T[:, [piece.j]]
+            value = T_i + (T_j - T_i) * np.clip(share, 0.0, 1.0)
+            made = np.where(here & (np.abs(value) > np.abs(made)), value, made)
+        return made
+
     def moment_column(self, row: int, column: int) -> int:
         """Return where the moment at a station stands: the larger, if it is written twice."""
         stations, M = self.source.imported.envelope.stations, self.source.imported.envelope.M

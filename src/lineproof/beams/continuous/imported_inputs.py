@@ -51,6 +51,11 @@ def _check_beside(given: Mapping[str, Any], faults: FaultList) -> None:
                 "write both, or leave it out"
             )
         return
+    if given["torques"]:
+        faults.add(
+            "torques: with forces_csv torsion is the column T of the file; write it there, or "
+            "leave torques out"
+        )
     if given["redistribution"]:
         faults.add(
             "redistribution: the moments of forces_csv are not ours to redistribute, their load "

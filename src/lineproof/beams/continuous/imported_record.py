@@ -67,17 +67,11 @@ NOT_COVERED = (
         "clause": "9.2.3.1",
     },
 )
-_TORSION = {"check": "Torsion: T of the imported cases", "clause": "11.3.10"}
-"""Told until the shear of a span takes the torsion of the file."""
 
 
 def not_covered(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     """Return what imported forces leave uncovered; nothing for our own analysis."""
-    file = inputs.forces_file
-    if file is None:
-        return []
-    rows = (*NOT_COVERED, _TORSION) if file.imported.T.any() else NOT_COVERED
-    return [dict(row) for row in rows]
+    return [dict(row) for row in NOT_COVERED] if inputs.forces_file is not None else []
 
 
 def record_imported_analysis(model: Model) -> None:

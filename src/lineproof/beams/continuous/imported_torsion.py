@@ -1,15 +1,12 @@
-"""Torsion of imported cases: between two stations of the file on the straight line.
+"""Torsion of an imported case as a line: between two stations of the file on the straight line.
 
-It stands in the place of a torque per length by load type: ``imported_torsion`` for the numbers of
-all cases, ``record_imported_torsion`` for the lines of one. Where a station is written twice, the
+It stands in the place of a torque per length by load type. Where a station is written twice, the
 side with the larger torsion counts.
 """
 
 from __future__ import annotations
 
-import numpy as np
-
-from lineproof.beams.analysis.curves import Floats, Side
+from lineproof.beams.analysis.curves import Side
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.groups import named
 from lineproof.beams.continuous.imported_case import line_of, typed
@@ -18,30 +15,6 @@ from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.steps import Steps
 
 _SCOPE = ("x_i", "x_j", "x_f", "x_s")
-
-
-def has_torsion(forces: ImportedForces, span: int) -> bool:
-    """Tell whether the file gives a span any torsion."""
-    columns = [c for p in forces.pieces[span - 1] for c in (p.i, p.j)]
-    return bool(forces.source.imported.T[:, columns].any())
-
-
-def imported_torsion(forces: ImportedForces, span: int, at: Floats) -> Floats:
-    """Return T of every case [N.mm], with its sign: (cases, places).
-
-    ``at`` holds places from the left axis of the span [mm]: (places,), or (cases, places) where
-    each case has its own.
-    """
-    T, pieces = forces.source.imported.T, forces.pieces[span - 1]
-    places = np.broadcast_to(at, (len(T), np.shape(at)[-1]))
-    made = np.zeros(places.shape)
-    for piece in pieces:
-        share = (places - piece.x_i) / (piece.x_j - piece.x_i)
-        here = (places >= piece.x_i - AT) & (places <= piece.x_j + AT)
-        T_i, T_j = T[:, [piece.i]], T[:, [piece.j]]
-        value = T_i + (T_j - T_i) * np.clip(share, 0.0, 1.0)
-        made = np.where(here & (np.abs(value) > np.abs(made)), value, made)
-    return made
 
 
 def record_imported_torsion(

@@ -17,6 +17,7 @@ from lineproof.beams.continuous.flexure import Face as FaceOfSupport
 from lineproof.beams.continuous.flexure import faces_of, hogging
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.groups import Group, groups_of
+from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.interface import (
     length_beside_sag,
     record_interface,
@@ -98,6 +99,8 @@ def _record_section(design: Design, section: ShearSection, more: Mapping[str, En
         _record_bars(design, steps, section)
         x = record_place(steps, section)
         record_forces(steps, model, section.demand, section.end, x=x)
+        if model.imported is not None and model.imported.has_torsion(span):
+            record_imported_torsion(steps, model.imported, section.demand, section.end)
         record_section(steps, design.stirrups.basis, section)
 
 

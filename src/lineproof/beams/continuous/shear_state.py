@@ -16,6 +16,7 @@ from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.curves import Floats, Side
 from lineproof.beams.analysis.model import PartialLoad, PointLoad
 from lineproof.beams.continuous.forces import End, Forces
+from lineproof.beams.continuous.imported_forces import ImportedForces
 from lineproof.beams.continuous.shear_arrays import Truths, holds, sides, value
 from lineproof.beams.continuous.shear_numbers import (
     ShearBasis,
@@ -252,6 +253,8 @@ def _torsion_along(
     """Return the size of the torsion of every case and column, before redistribution."""
     if numbers.torsion is None:
         return np.zeros_like(at)
+    if isinstance(forces, ImportedForces):
+        return np.abs(forces.imported_torsion(numbers.span, at))
     torque = torque_per_length(numbers.torsion, forces, numbers.span)
     still = (faces[0] + faces[1]) / 2
     if numbers.left.held == "free":

@@ -12,9 +12,10 @@ PER_METRE = 1000.0
 
 
 def span_torsion(model: Model, designed: Designed, span: int) -> SpanTorsion | None:
-    """Return torque and section of a span; None where no torque is given."""
+    """Return torque and section of a span; None where no torque is given or imported."""
     inputs, find = model.inputs, model.sheet.find
-    if not inputs.torques:
+    imported = model.imported is not None and model.imported.has_torsion(span)
+    if not inputs.torques and not imported:
         return None
     outline = designed.outline
     sides = {"T": 2, "L": 1, "rectangular": 0}[outline.shape]

@@ -28,6 +28,10 @@ _COMPATIBILITY = (
     "The torsion arises from compatibility: the frame can redistribute what exceeds 0.67 times the "
     "torsion that cracks the section. Members that take up the rest must be designed for it."
 )
+_IMPORTED = (
+    "The torsion of every case is that of the frame analysis, on the straight line between two of "
+    "its stations."
+)
 _KINDS = {"D": "dead load", "L": "live load", "L_st": "live load of storage", "S": "snow"}
 
 
@@ -47,9 +51,10 @@ def record_span_torsion(
             name, f"{torque / 1000:.12g} kN", f"torque per length by {_KINDS.get(kind, kind)}",
             source="kN.m per metre of beam",
         )  # fmt: skip
+    held = _HELD_ONCE if cantilever else _HELD
     sheet.note(
         "held",
-        _HELD_ONCE if cantilever else _HELD,
+        held if torsion.torques else _IMPORTED,
         title="Torsion along the span",
         clause="statics",
     )
@@ -75,8 +80,25 @@ def record_torsion(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
 
     Needs what :func:`record_span_torsion` returns in place, and l_n, x_f, d_v, b_sn.
     """
-    if not section.torques:
+    if section.torques:
+        T_f = _record_torque(steps, section)
+    elif "T_f" in steps.place:  # imported
+        T_f = steps.entry("T_f")
+    else:
         return
+    if not steps.decide(clause.COUNTS):
+        return
+    if not basis.closed:
+        raise UserError(
+            "stirrups: torsion counts here, but the stirrups are open; write closed stirrups"
+        )
+    if section.compatibility:
+        T_f = steps.line(clause.COMPATIBILITY, T_cr=steps.entry("T_crd"))
+    steps.bind(T_f=T_f)
+
+
+def _record_torque(steps: Steps, section: ShearSection) -> Entry:
+    """Record the torsion at a section by the torques along its span."""
     terms = " + ".join(f"{factor:.12g}*{_symbol(kind)}" for kind, _, factor in section.torques)
     if any(torque * factor < 0 for _, torque, factor in section.torques):
         terms = f"abs({terms})"
@@ -89,16 +111,7 @@ def record_torsion(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
         steps.bind(x_n=steps.entry("d_v"))
     else:
         steps.bind(x_n=steps.sheet.given("x_n", "0 mm", source="at the face"))
-    T_f = steps.line(clause.TORQUE_CANTILEVER if section.cantilever else clause.TORQUE)
-    if not steps.decide(clause.COUNTS):
-        return
-    if not basis.closed:
-        raise UserError(
-            "stirrups: torsion counts here, but the stirrups are open; write closed stirrups"
-        )
-    if section.compatibility:
-        T_f = steps.line(clause.COMPATIBILITY, T_cr=steps.entry("T_crd"))
-    steps.bind(T_f=T_f)
+    return steps.line(clause.TORQUE_CANTILEVER if section.cantilever else clause.TORQUE)
 
 
 def record_torsion_legs(steps: Steps) -> None:
