@@ -296,6 +296,14 @@ def test_the_page_says_where_the_forces_come_from(files: dict[str, Any]) -> None
     assert [row[-1] for row in rows] == ["1.00"] * 3
 
 
+def test_reactions_are_those_of_the_file(own: beams.ContinuousBeam, files: dict[str, Any]) -> None:
+    """The largest reaction of every support is that of our own statics, to the printed digits."""
+    rows = record_so_far(analysed(**files)).entries["analysis/imported-reactions"]["rows"]
+    ours = own.model.forces.solved.solution.reactions.max(axis=0) / 1e3
+    assert [row[0] for row in rows] == ["1", "2", "3", "4"]
+    assert [float(row[1]) for row in rows] == pytest.approx(ours.tolist(), abs=0.051)
+
+
 def test_no_path_of_the_machine_is_recorded(files: dict[str, Any], tmp_path: Path) -> None:
     assert os.fspath(tmp_path) not in str(record_so_far(analysed(**files)).data)
 

@@ -43,6 +43,7 @@ _CASE_COLUMNS = [
     "Combination", "Case", "M, largest, kN.m", "At", "M, smallest, kN.m", "At",
     "V, largest size, kN", "At",
 ]  # fmt: skip
+REACTIONS_TITLE = "Largest and smallest reactions of the imported cases, factored as in the file"
 _LOAD_COLUMNS = [
     "Span", "File, kN", "Case", "Load take-down, kN", "Combination", "Ratio",
 ]  # fmt: skip
@@ -94,9 +95,8 @@ def record_imported_analysis(model: Model) -> None:
             "imported-cases", _CASE_COLUMNS, rows,
             title="Imported load cases with the largest or smallest moment or shear of a station",
         )  # fmt: skip
-        title = "Largest and smallest reactions of the imported cases, factored as in the file"
-        sheet.table("imported-reactions", _REACTION_COLUMNS, _reaction_rows(model, forces),
-                    title=title)  # fmt: skip
+        columns, reactions = imported_reactions(model)
+        sheet.table("imported-reactions", columns, reactions, title=REACTIONS_TITLE)
         _record_take_down(model, forces)
         sheet.note("reactions-source", _reactions_text(file), title="Reactions")
 
@@ -239,8 +239,12 @@ def _case_rows(forces: ImportedForces) -> Iterator[list[str]]:
         yield made
 
 
-def _reaction_rows(model: Model, forces: ImportedForces) -> list[list[str]]:
-    """Return largest and smallest reaction of every support with their cases."""
+def imported_reactions(model: Model) -> tuple[list[str], list[list[str]]]:
+    """Return columns and rows of the largest and smallest reaction of every support, by case."""
+    forces = model.imported
+    if forces is None:
+        msg = "the forces are not imported"
+        raise TypeError(msg)
     made = []
     for number, support in enumerate(model.inputs.supports, start=1):
         if support.kind == "free":
@@ -252,7 +256,7 @@ def _reaction_rows(model: Model, forces: ImportedForces) -> list[list[str]]:
             _number(R[high], "kN"), str(forces.cases[high]),
             _number(R[low], "kN"), str(forces.cases[low]),
         ])  # fmt: skip
-    return made
+    return list(_REACTION_COLUMNS), made
 
 
 def _reactions_of(forces: ImportedForces, support: int) -> Sequence[float]:
