@@ -16,7 +16,7 @@ from lineproof.beams.continuous.anchorage import (
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import in_line
+from lineproof.beams.continuous.resistance import lap_pairs
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
@@ -218,7 +218,7 @@ def length_entry(writers: Writers, lengths: Lengths, run: BarRun) -> Entry:
 def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
     """Record every kind of lap in a part: size, length against what is laid, room for concrete."""
     designed, kept = writers.designed, tuple(runs)
-    pairs = _pairs(kept)
+    pairs = [(kept[i], kept[j]) for i, j in sorted(lap_pairs(kept), key=lambda p: kept[p[1]].start)]
     seen: dict[tuple[Bar, float], int] = {}
     for first, second in pairs:
         thin = min(first, second, key=lambda run: run.diameter)
@@ -226,16 +226,6 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         if same not in seen:
             seen[same] = len(seen) + 1
             _record_lap(writers, lengths, thin, first, second, seen[same])
-
-
-def _pairs(runs: tuple[BarRun, ...]) -> list[tuple[BarRun, BarRun]]:
-    """Return the runs that are lapped: each with the one that reaches furthest into the lap."""
-    made = []
-    for second in runs:
-        mates = [run for run in runs if in_line(run, second)]
-        if mates:
-            made.append((max(mates, key=lambda run: run.end), second))
-    return made
 
 
 def _record_lap(

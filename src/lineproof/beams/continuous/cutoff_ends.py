@@ -11,7 +11,7 @@ from lineproof.beams.continuous.cutoff import distance, far_face, half_of, local
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import alike, in_line, lapped
+from lineproof.beams.continuous.resistance import alike, lap_pairs, lapped
 from lineproof.beams.continuous.resistance_demand import NOTHING
 
 Runs = tuple[BarRun, ...]
@@ -29,10 +29,10 @@ class Ending:
 class SideOf:
     """The bars of one section towards one end: below a span, or above a support.
 
-    ``near`` names the support by its side of the span. ``runs`` are all bars of the section,
-    ``cuts`` those that end within the span before the support (top: before the longest), first
-    the ones that end first, ``kept`` the others: they run in, or reach furthest; ``t_kept`` is
-    the shortest reach of these.
+    ``near`` names the support by its side of the span. ``runs`` are all bars of the section.
+    ``cuts`` are those that end within the span before the support (top: before the longest and
+    before the far support), first the ones that end first; ``kept`` the others, which run in or
+    reach furthest, and ``t_kept`` the shortest reach of these.
     """
 
     face: Face
@@ -56,12 +56,12 @@ class SideOf:
 def whole(runs: Iterable[BarRun], run: BarRun, towards: End) -> BarRun:
     """Return the last of the like bars that a run is lapped with, one after the other."""
     kept = tuple(runs)
-    for _ in kept:
-        following = [r for r in kept if (lapped(run, r) if towards == "right" else lapped(r, run))]
-        if not following:
-            break
-        run = following[0]
-    return run
+    pairs = lap_pairs(kept, lapped)
+    after = dict(pairs) if towards == "right" else {j: i for i, j in pairs}
+    index = next((i for i, other in enumerate(kept) if other is run), -1)
+    while index in after:
+        index = after[index]
+    return run if index < 0 else kept[index]
 
 
 def tip(run: BarRun, towards: End) -> float:
@@ -79,16 +79,15 @@ def at_section(runs: Iterable[BarRun], face: Face, x: float) -> Runs:
         for run in runs
         if run.face == face and run.place != "side face" and run.start < x < run.end
     ]
-    return tuple(run for run in there if not any(_beside(run, other, x) for other in there))
+    aside = {_beside(there[i], there[j], i, j, x) for i, j in lap_pairs(there)}
+    return tuple(run for index, run in enumerate(there) if index not in aside)
 
 
-def _beside(run: BarRun, mate: BarRun, x: float) -> bool:
-    """Tell whether a run only accompanies another one, with which it is lapped, at a place."""
-    if alike(run, mate):
-        return lapped(mate, run)
-    if in_line(mate, run):
-        return x - run.start < mate.end - x
-    return in_line(run, mate) and run.end - x < x - mate.start
+def _beside(first: BarRun, second: BarRun, i: int, j: int, x: float) -> int:
+    """Return which of two lapped runs, by its place, only accompanies the other one at x."""
+    if alike(first, second):
+        return j
+    return j if x - second.start < first.end - x else i
 
 
 def bottom_side(designed: Designed, runs: Runs, span: int, near: End) -> SideOf:
@@ -111,10 +110,13 @@ def top_side(designed: Designed, runs: Runs, support: int, side: End) -> SideOf:
     axis = designed.outline.axes[support - 1]
     there = at_section(runs, "top", _inside(designed, support, axis))
     tips = [(distance(designed, span, near, tip(whole(runs, r, side), side)), r) for r in there]
-    ends = sorted({t for t, _ in tips})
-    endings = tuple(Ending(t, tuple(r for s, r in tips if s == t)) for t in ends[:-1])
-    kept = tuple(r for t, r in tips if t == ends[-1]) if ends else ()
-    return SideOf("top", span, near, there, endings, kept, ends[-1] if ends else 0.0)
+    far = far_face(designed, span, near)
+    most = min(max((t for t, _ in tips), default=0.0), far)
+    ends = sorted({t for t, _ in tips if t < most})
+    endings = tuple(Ending(t, tuple(r for s, r in tips if s == t)) for t in ends)
+    kept = tuple(r for t, r in tips if t >= most)
+    t_kept = min((t for t, _ in tips if t >= most), default=0.0)
+    return SideOf("top", span, near, there, endings, kept, t_kept)
 
 
 def _inside(designed: Designed, support: int, axis: float) -> float:

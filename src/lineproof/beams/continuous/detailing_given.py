@@ -12,7 +12,7 @@ from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, val
 from lineproof.beams.continuous.cutoff_ends import at_section
 from lineproof.beams.continuous.detailing_data import Basis, SectionBars, TopBars
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
-from lineproof.beams.continuous.resistance import in_line
+from lineproof.beams.continuous.resistance import lap_pairs
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo, read_quantity
 from lineproof.standards.a23_3 import bars as bar_clause
@@ -157,7 +157,8 @@ def _check_layers(runs: tuple[BarRun, ...], basis: Basis, faults: FaultList) -> 
     for x in _places(runs, basis.outline):
         for face in FACES:
             there = [r for r in at_section(runs, face, x) if r.place == "web"]
-            there = [r for r in there if not any(in_line(before, r) for before in there)]
+            lapped = {j for _, j in lap_pairs(there)}
+            there = [r for index, r in enumerate(there) if index not in lapped]
             for layer in sorted({r.layer for r in there}):
                 row = [r for r in there if r.layer == layer]
                 fault = _fault_of_layer(row, basis, x)

@@ -142,7 +142,21 @@ def _reaches(frame: Frame, support: int) -> dict[End, Reach]:
         if groups and designed.forces.has_span(support, side):
             span = support - 1 if side == "left" else support
             reaches[side] = _reach(frame, span, other(side), groups, long_of(groups))
+    if len(reaches) == len(SIDES):
+        reaches = {side: _developed(designed, support, side, groups, found)
+                   for side, found in reaches.items()}  # fmt: skip
     return _alike(designed, support, reaches)
+
+
+def _developed(
+    designed: Designed, support: int, side: End, groups: Sequence[BarRun], found: Reach
+) -> Reach:
+    """Return a reach that develops the bars at the support axis, for the face beyond it."""
+    span = support - 1 if side == "left" else support
+    most = designed.outline.lengths[span - 1] - designed.end_cover
+    longest = max(develop(designed.basis, bar_of(designed, run)).l_d for run in groups)
+    least = min(ceil50(longest), most)
+    return Reach(max(found.long, least), max(found.short, least), found.through)
 
 
 def _placed_all(designed: Designed, support: int, reaches: dict[End, Reach]) -> list[BarRun]:

@@ -7,7 +7,7 @@ lap, so that two lapped bars count as one). Compression bars are not counted.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -76,6 +76,30 @@ def in_line(first: BarRun, second: BarRun) -> bool:
     return a == b and first.number == PAIR and overlapping and first.end - second.start <= most
 
 
+def lap_pairs(
+    runs: Sequence[BarRun], test: Callable[[BarRun, BarRun], bool] = in_line
+) -> tuple[tuple[int, int], ...]:
+    """Return which runs are lapped, by their places in the list: one that ends, one that starts.
+
+    Every end has one mate at most: of several, the one with the longest overlap.
+    """
+    found = [
+        (first.end - second.start, i, j)
+        for i, first in enumerate(runs)
+        for j, second in enumerate(runs)
+        if first.start < second.start < first.end < second.end and test(first, second)
+    ]
+    ended: set[int] = set()
+    started: set[int] = set()
+    made = []
+    for _, i, j in sorted(found, key=lambda row: (-row[0], row[1], row[2])):
+        if i not in ended and j not in started:
+            ended.add(i)
+            started.add(j)
+            made.append((i, j))
+    return tuple(made)
+
+
 def distance_of(designed: Designed, run: BarRun) -> float:
     """Return the distance of the centres of a run's bars from their face."""
     c_c = designed.outline.cover
@@ -104,11 +128,12 @@ def first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
 def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
     """Return the runs with the lengths over which their stress rises."""
     kept = [run for run in runs if run.place != "side face"]
+    pairs = lap_pairs(kept, lapped)
+    ends, starts = ({pair[side] for pair in pairs} for side in (0, 1))
     made = []
-    for run in kept:
+    for index, run in enumerate(kept):
         bar = develop(designed.basis, bar_of(designed, run))
-        lap_start = any(lapped(other, run) for other in kept)
-        lap_end = any(lapped(run, other) for other in kept)
+        lap_start, lap_end = index in starts, index in ends
         made.append(
             Standing(
                 run,

@@ -122,7 +122,7 @@ def _demand(writers: Writers, station: Station, *, tension: bool) -> Demand:
     row = int((side.F_row if tension else side.M_row)[0])
     start, end = writers.designed.forces.beam.faces(station.span)
     x = min(max(station.local, start), end)
-    both = [forces.demand(station.span, x, s, row) for s in ("left", "right")]  # type: ignore[arg-type]
+    both = [forces.demand(station.span, x, s, row) for s in ("left", "right")]
     return max(both, key=lambda d: abs(d.V))
 
 

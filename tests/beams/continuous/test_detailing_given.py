@@ -1,0 +1,124 @@
+"""Given bars: read, refused with what to write, and failing where they leave a gap."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import replace
+from typing import Any
+
+import pytest
+
+from lineproof.beams.bars import BarLayer
+from lineproof.beams.continuous.detailing import lay_bars
+from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
+from lineproof.beams.continuous.detailing_given import read_given_runs, section_bars_of
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance_cover import covered
+from lineproof.errors import UserError
+from lineproof.standards.codes import code_pair
+
+from .laid import PAIR_19, PAIR_24, beam_of, three_spans
+
+Row = dict[str, Any]
+DESIGNED = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
+BASIS, PAIR = DESIGNED.basis, code_pair(PAIR_19)
+GOOD: Row = {"face": "bottom", "bars": "2-25M", "start": "-0.15 m", "end": "7.15 m"}
+
+
+def row(**changes: Any) -> Row:
+    """The good row, changed."""
+    return GOOD | changes
+
+
+def test_a_row_is_read() -> None:
+    (run,) = read_given_runs([row(hook_start="90", serves="span 1")], BASIS, PAIR)
+    assert run == BarRun("bottom", 1, 2, "25M", -150.0, 7150.0, hook_start="90", serves="span 1")
+
+
+@pytest.mark.parametrize(
+    ("changes", "words"),
+    [
+        ({"bars": "2-26M"}, "write '2-25M'"),
+        ({"bars": "two"}, "write '2-25M'"),
+        ({"face": "below"}, "write one of 'bottom', 'top'"),
+        ({"layer": 3}, "write one of 1, 2"),
+        ({"start": "0.5"}, "has no unit"),
+        ({"end": "9 m"}, "9000 mm is outside the beam, which goes from -200 to 7200 mm"),
+        ({"start": "5 m", "end": "5 m"}, "write start below end"),
+        ({"end": "3 m", "hook_end": "90"}, "not at an end support or a free end"),
+        ({"hook_start": "135"}, "write one of '', '90', '180'"),
+        ({"place": "overhang"}, "no slab beside the bottom bars"),
+        ({"cover": "40 mm"}, "'cover' is not known; write one of face, bars"),
+        ({"bars": "8-25M"}, "8 bars up to 25M stand side by side"),
+    ],
+)
+def test_bad_rows_say_what_to_write(changes: Row, words: str) -> None:
+    with pytest.raises(UserError) as told:
+        read_given_runs([row(**changes)], BASIS, PAIR)
+    assert words in str(told.value)
+
+
+def test_all_faults_at_once() -> None:
+    rows = [row(bars="x"), row(start="9 m", end="8 m"), {"face": "top"}]
+    with pytest.raises(UserError) as told:
+        read_given_runs(rows, BASIS, PAIR)
+    text = "\n".join(told.value.faults)
+    assert "bar run 1, bars" in text
+    assert "bar run 2: starts at 9000 mm" in text
+    assert "bar run 2, start: 9000 mm is outside" in text
+    assert "bar run 3: bars is missing" in text
+    with pytest.raises(UserError, match="none given"):
+        read_given_runs([], BASIS, PAIR)
+
+
+def test_hooks_of_the_2024_edition_are_refused() -> None:
+    with pytest.raises(UserError, match="write straight bars"):
+        read_given_runs([row(hook_start="90")], BASIS, code_pair(PAIR_24))
+
+
+def test_a_section_that_needs_more_bars_than_stand_there() -> None:
+    sections = SectionBars(
+        ((BarLayer(4, "25M"),),), (TopBars(), TopBars((BarLayer(2, "20M"),))), "15M"
+    )
+    with pytest.raises(UserError) as told:
+        read_given_runs([GOOD], BASIS, PAIR, sections)
+    text = str(told.value)
+    assert "span 1: 4-25M asked for in layer 1 of the bottom bars, but 2-25M stand at 3500" in text
+    assert "support 2: 2-20M asked for in layer 1 of the top bars, but none stand at 6800" in text
+    more = [GOOD, row(start="1.2 m", end="5.8 m"),
+            row(face="top", bars="2-20M", start="5 m", end="7.15 m")]  # fmt: skip
+    assert len(read_given_runs(more, BASIS, PAIR, sections)) == 3
+
+
+def test_sections_are_read_from_the_runs() -> None:
+    designed = three_spans()
+    runs = lay_bars(designed)
+    assert section_bars_of(runs, designed.outline, "15M") == designed.bars
+
+
+def test_two_sizes_in_one_layer_are_refused() -> None:
+    runs = read_given_runs([GOOD, row(bars="2-20M")], BASIS, PAIR)
+    with pytest.raises(UserError, match="20M and 25M stand in layer 1 of the bottom bars"):
+        section_bars_of(runs, BASIS.outline, "15M")
+
+
+def test_no_bars_at_midspan_are_refused() -> None:
+    runs = read_given_runs([row(end="3 m")], BASIS, PAIR)
+    with pytest.raises(UserError, match="no bottom bars stand at the middle of span 1"):
+        section_bars_of(runs, BASIS.outline, "15M")
+
+
+def spoiled(change: Callable[[BarRun], BarRun]) -> bool:
+    """Whether the bars of the three-span beam cover it once one kind of run is changed."""
+    designed = three_spans()
+    return covered(designed, tuple(change(run) for run in lay_bars(designed)), 300).holds
+
+
+def test_bars_taken_away_or_cut_leave_gaps() -> None:
+    assert spoiled(lambda run: run)
+    assert not spoiled(lambda r: replace(r, number=1) if r.serves == "support 2" else r)
+    assert not spoiled(lambda r: replace(r, end=r.end - 1500) if r.serves == "support 2" else r)
+    assert not spoiled(
+        lambda r: replace(r, start=r.start + 200, hook_start="") if r.hook_start else r
+    )
+    assert not spoiled(lambda r: replace(r, size="15M") if r.serves == "span 1" else r)
