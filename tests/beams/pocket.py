@@ -35,7 +35,7 @@ FACTORS: dict[str, dict[str, Fraction]] = {
     "kN-m": {
         "": Fraction(1), "m": Fraction(1), "kN": Fraction(1), "kN.m": Fraction(1),
         "kN/m": Fraction(1), "kPa": Fraction(1), "kN/m3": Fraction(1), "mm": Fraction(1, 1000),
-        "kN.m2": Fraction(1),
+        "kN.m2": Fraction(1), "m2": Fraction(1),
     },
 }  # fmt: skip
 
