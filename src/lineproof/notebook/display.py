@@ -53,17 +53,21 @@ def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:
     ``ran`` holds the hashes of the cells run so far, by their counts. They stand in the metadata
     with the part's digest, so that a reader can tell outputs that are older than their cells.
     """
-    record = view.record()
-    part = record["parts"][-1]
-    data = part_bundle(record, part)
+    record, labels = view.record()
+    part = record["part"]
+    data = part_bundle(record, part, labels)
     note = {"part": part_digest(part), "cells": ran or []}
     return data, {METADATA: note}
 
 
-def part_bundle(record: Mapping[str, Any], part: Mapping[str, Any]) -> dict[str, Any]:
-    """Return what a part of a record looks like in a notebook, by MIME type."""
+def part_bundle(
+    record: Mapping[str, Any], part: Mapping[str, Any], labels: Mapping[str, str]
+) -> dict[str, Any]:
+    """Return what a part looks like in a notebook, by MIME type.
+
+    ``record`` carries the notation, ``labels`` the printed label of every entry by id.
+    """
     notation = notation_of(record)
-    labels = {e["id"]: e.get("label", "") for p in record["parts"] for e in p["entries"]}
     rows = [printed_row(entry, notation, labels) for entry in part["entries"]]
     return {
         ANCHOR: {"part": part["key"]},

@@ -214,7 +214,7 @@ class _Builder:
                 for item in status.get("not_covered", [])
             ),
             marks={entry_id: tuple(notes) for entry_id, notes in self.marks.items()},
-            statements=tuple(r.text for r in rows if r.id.endswith("/bars-text")),
+            statements=() if front else tuple(r.text for r in rows if r.id.endswith("/bars-text")),
             front=tuple(front),
         )
 

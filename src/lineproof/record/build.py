@@ -43,19 +43,13 @@ def build(
     notation: Notation,
     scope: str,
     not_covered: Iterable[Mapping[str, str]],
-    numbers: Mapping[str, int] | None = None,
 ) -> dict[str, Any]:
-    """Return the record of a calculation as plain data, printed strings and digest included.
-
-    ``numbers`` are those of the parts by key, where some are left out; else they count from 1.
-    """
+    """Return the record of a calculation as plain data, printed strings and digest included."""
     parts = list(parts)
-    if numbers is None:
-        numbers = {part.key: n for n, part in enumerate(parts, 1)}
     wanted: dict[int, int] = {}
     for _ in range(MOST_PASSES):
         builder = _Builder(notation, wanted)
-        made = [builder.part(part, str(numbers[part.key])) for part in parts]
+        made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
         needed = {key: max(n, wanted.get(key, 0)) for key, n in builder.wanted.items()}
         if needed == wanted:
             break
@@ -99,11 +93,66 @@ def _scope(scope: str, confirm: list[dict[str, Any]]) -> str:
     return ""
 
 
+def labels_of(parts: Iterable[tuple[Part, int]]) -> dict[str, str]:
+    """Return the printed label of every entry of numbered parts, by id, without printing them."""
+    return {
+        entry.id: label for part, number in parts for entry, label in _labelled(part, str(number))
+    }
+
+
+def _labelled(part: Part, label: str) -> Iterator[tuple[Entry, str]]:
+    number = 0
+    for entry in part.entries.values():
+        # A note on a clause may have to be confirmed, so it can be named.
+        numbered = entry.kind not in _UNNUMBERED or bool(entry.source.clause)
+        number += numbered
+        yield entry, f"{label}.{number}" if numbered else ""
+
+
+class PartByPart:
+    """Prints parts as they close, each once, for a notebook; remembers what each has shown.
+
+    A value is printed with the digits that its own part and those before ask for.
+    """
+
+    def __init__(self) -> None:
+        self._made: dict[int, tuple[Part, dict[str, Any]]] = {}
+        self._digits: dict[int, int] = {}
+
+    def part(self, part: Part, number: int, notation: Notation) -> dict[str, Any]:
+        """Return a part and the symbols it uses as plain data: ``part`` and ``notation``."""
+        known = self._made.get(id(part))
+        if known is not None and known[1]["part"]["label"] == str(number):
+            return known[1]
+        wanted: dict[int, int] = {}
+        for _ in range(MOST_PASSES):
+            builder = _Builder(notation, wanted, self._digits)
+            made = builder.part(part, str(number))
+            needed = {key: max(n, wanted.get(key, 0)) for key, n in builder.wanted.items()}
+            if needed == wanted:
+                break
+            wanted = needed
+        self._digits.update(builder.shown)
+        data = {"part": made, "notation": builder.notation()}
+        self._made[id(part)] = part, data  # with the part, so that its id stays its own
+        return data
+
+
 class _Builder:
-    def __init__(self, notation: Notation, wanted: Mapping[int, int] | None = None) -> None:
+    def __init__(
+        self,
+        notation: Notation,
+        wanted: Mapping[int, int] | None = None,
+        digits: Mapping[int, int] | None = None,
+    ) -> None:
         self._known = notation
         self._used: dict[str, Symbol] = {}
-        self._printer = Printer(wanted)
+        self._printer = Printer(wanted, digits)
+
+    @property
+    def shown(self) -> Mapping[int, int]:
+        """The digits that entries have shown at their own lines."""
+        return self._printer.digits
 
     @property
     def wanted(self) -> Mapping[int, int]:
@@ -116,13 +165,7 @@ class _Builder:
         return [{f: getattr(symbol, f) for f in fields} for symbol in used]
 
     def part(self, part: Part, label: str) -> dict[str, Any]:
-        rows: list[dict[str, Any]] = []
-        number = 0
-        for entry in part.entries.values():
-            # A note on a clause may have to be confirmed, so it can be named.
-            numbered = entry.kind not in _UNNUMBERED or bool(entry.source.clause)
-            number += numbered
-            rows.append(self._entry(entry, f"{label}.{number}" if numbered else ""))
+        rows = [self._entry(entry, own) for entry, own in _labelled(part, label)]
         return {"key": part.key, "label": label, "title": part.title, "entries": rows}
 
     def _entry(self, entry: Entry, label: str) -> dict[str, Any]:

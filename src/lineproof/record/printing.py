@@ -60,11 +60,13 @@ class Printer:
 
     A later line may need more digits of a value than its own line shows. ``wanted`` holds what a
     pass before this one found, by entry, so that a value reads the same wherever it stands;
-    ``used`` holds what this pass finds.
+    ``used`` holds what this pass finds; ``digits`` those that entries printed before have shown.
     """
 
-    def __init__(self, wanted: Mapping[int, int] | None = None) -> None:
-        self._digits: dict[int, int] = {}
+    def __init__(
+        self, wanted: Mapping[int, int] | None = None, digits: Mapping[int, int] | None = None
+    ) -> None:
+        self.digits: dict[int, int] = dict(digits or {})
         self._wanted = dict(wanted or {})
         self.used: dict[int, int] = {}
 
@@ -76,7 +78,7 @@ class Printer:
         """Return the printed strings of a given, lookup, line or found value."""
         if entry.kind == GIVEN:
             made = _given(entry, self._wanted.get(id(entry), 0))
-            self._digits[id(entry)] = digits_in(made["result"])
+            self.digits[id(entry)] = digits_in(made["result"])
         elif entry.kind == LOOKUP:
             made = {"result": entry.source.typed.number, "unit": entry.source.unit}
         elif entry.kind == FOUND:
@@ -135,7 +137,7 @@ class Printer:
         if isinstance(tree, Name):
             at = test.names.index(tree.id)
             exact = exact_decimal(args[at])
-            own = self._digits.get(id(args[at]), START_DIGITS)
+            own = self.digits.get(id(args[at]), START_DIGITS)
             digits = needed or (_shown_digits(exact, args[at], test.unit) if exact else own)
             shown = [a.digits for a in arguments]
             shown[at] = max(shown[at], digits)
@@ -152,7 +154,7 @@ class Printer:
 
     def _argument(self, entry: Entry) -> Argument:
         exact = exact_decimal(entry)
-        own = self._digits.get(id(entry), START_DIGITS)
+        own = self.digits.get(id(entry), START_DIGITS)
         start = max(START_DIGITS, own, start_digits(entry.value, entry.unit))
         return Argument(
             entry.value, min(start, MOST_DIGITS), None if exact is None else float(exact)
@@ -179,7 +181,7 @@ class Printer:
         }
         for arg, digits in zip(entry.args, chosen.args, strict=True):
             self._note_use(arg, digits)
-        self._digits[id(entry)] = chosen.result
+        self.digits[id(entry)] = chosen.result
         return {
             "args": texts,
             "result": in_unit(entry.value, unit, chosen.result),
@@ -190,7 +192,7 @@ class Printer:
     def _found(self, entry: Entry) -> dict[str, Any]:
         least = max(4, start_digits(entry.value, entry.unit))
         digits = max(least, self._wanted.get(id(entry), 0))
-        self._digits[id(entry)] = digits
+        self.digits[id(entry)] = digits
         texts = {
             name: _argument_text(arg, argument, argument.digits, "N-mm")
             for name, arg in zip(entry.source.names, entry.args, strict=True)

@@ -79,7 +79,8 @@ class Parts:
         """
         if self._chapter is not None:
             raise UserError(f"{call} was called inside a chapter; call it by itself")
-        self._chapter = made = {}
+        made: dict[str, None] = {}
+        self._chapter = made
         try:
             yield
         finally:

@@ -13,7 +13,7 @@ from lineproof.formula.notation import check_id
 from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
 from lineproof.record import Entry, Part, Record
-from lineproof.record.build import build
+from lineproof.record.build import PartByPart, build, labels_of
 from lineproof.record.entry import CHECK, DECISION, GIVEN, LINE, LOOKUP
 from lineproof.record.sources import GivenSource, LookupSource
 from lineproof.sheet.finding import NOT_COMPUTED, Finding
@@ -31,13 +31,15 @@ class PartView:
     def __init__(self, sheet: Sheet, key: str) -> None:
         self.sheet, self.key = sheet, key
 
-    def record(self) -> dict[str, Any]:
-        """Return the record data of the part, last, behind those it rests on."""
+    def record(self) -> tuple[dict[str, Any], dict[str, str]]:
+        """Return the part and the symbols it uses as plain data, and the labels of all entries."""
         parts = {part.key: part for part in self.sheet.parts}
         numbers = {key: n for n, key in enumerate(parts, 1)}
         own = parts[self.key]
-        before = [part for part in behind(own, parts) if part is not own]
-        return self.sheet.view([*before, own], numbers)
+        data: dict[str, Any] = {}
+        for part in [*(p for p in behind(own, parts) if p is not own), own]:
+            data = self.sheet.printed.part(part, numbers[part.key], self.sheet.notation)
+        return data, labels_of((part, numbers[key]) for key, part in parts.items())
 
 
 class Sheet(Finding):
@@ -72,6 +74,7 @@ class Sheet(Finding):
         self.calc = {"id": calc_id, "title": title}
         self.project: dict[str, Any] = dict(project or {})
         self.notation = notation or Notation(())
+        self.printed = PartByPart()
         self.codes: dict[str, str] = {}
         self.member = ""
         self.scope = ""
@@ -283,15 +286,9 @@ class Sheet(Finding):
         # Read as any other record: what could not be read back is refused here.
         return Record.from_data(self.view(in_order(self._parts)))
 
-    def view(
-        self, parts: Iterable[Part], numbers: Mapping[str, int] | None = None
-    ) -> dict[str, Any]:
-        """Return the record data of some parts, without the checks of :meth:`close`.
-
-        ``numbers`` are those that the parts carry; else they count from 1.
-        """
+    def view(self, parts: Iterable[Part]) -> dict[str, Any]:
+        """Return the record data of some parts, without the checks of :meth:`close`."""
         return build(
             parts, calc=self.calc, member=self.member, project=self.project, codes=self.codes,
             notation=self.notation, scope=self.scope, not_covered=self.not_covered,
-            numbers=numbers,
         )  # fmt: skip

@@ -8,7 +8,7 @@ from lineproof.beams.continuous.bending import BEND_NOTE
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.figure_bends import bends_figures
 from lineproof.beams.continuous.figure_cross_section import sections_of
-from lineproof.beams.continuous.figure_elevation import elevation_figure, elevation_figures
+from lineproof.beams.continuous.figure_elevation import elevation_figures
 from lineproof.beams.continuous.quantities import NOTE as QUANTITY_NOTE
 from lineproof.beams.continuous.quantities import quantities
 from lineproof.beams.continuous.schedule import Schedule, over_stock, schedule
@@ -95,22 +95,17 @@ def _figure(
 
 
 def record_drawings(design: Design, front: int) -> None:
-    """Record sections and elevation inside the open part; the whole elevation goes to DXF."""
+    """Record elevation and sections inside the open part, for the page and as DXF."""
     made = schedule_of(design)
     sheet, aggregate = design.model.sheet, design.model.inputs.aggregate.value
     rests = _rests_on(sheet)
     sections = sections_of(design.outline, made.detailing, aggregate=aggregate)
     marks = tuple((letter, x) for letter, x, _ in sections)
     grade = design.model.inputs.grade
-    for number, figure in enumerate(
-        elevation_figures(design.outline, made.detailing, sections=marks, grade=grade), start=1
-    ):
-        _figure(sheet, f"elevation-{number}", figure, front, rests)
+    drawn = elevation_figures(design.outline, made.detailing, sections=marks, grade=grade)
+    for number, figure in enumerate(drawn, start=1):
+        dxf = "elevation" if len(drawn) == 1 else f"elevation-{number}"
+        _figure(sheet, f"elevation-{number}", figure, front, rests, dxf=dxf)
     for letter, _, figure in sections:
         _figure(sheet, f"section-{letter.lower()}", figure, front + 1, rests,
                 dxf=f"section-{letter.lower()}")  # fmt: skip
-    whole = elevation_figure(design.outline, made.detailing, sections=marks, grade=grade)
-    sheet.figure(
-        "elevation-whole", to_json(whole), title=whole.caption, alt=whole.alt, rests_on=rests,
-        dxf="elevation",
-    )  # fmt: skip
