@@ -52,8 +52,13 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
         )
 
 
-def record_materials(sheet: Sheet, density: str, grade: str, pair: CodePair) -> None:
-    """Record the material factors, the stress block and the modulus of rupture."""
+def record_materials(
+    sheet: Sheet, density: str, grade: str, pair: CodePair, *, whole_beam: bool = False
+) -> None:
+    """Record the material factors, the stress block and the modulus of rupture.
+
+    For a ``whole_beam`` the clauses of shear and anchorage count among those that changed.
+    """
     with sheet.part(MATERIALS, "Materials"):
         sheet.lookup("phi_c", materials.RESISTANCE_FACTORS, "cast in place")
         sheet.lookup("phi_s", materials.RESISTANCE_FACTORS, "cast in place")
@@ -65,7 +70,7 @@ def record_materials(sheet: Sheet, density: str, grade: str, pair: CodePair) -> 
         sheet.line(materials.F_R)
         sheet.line(stress_block.ALPHA_1)
         sheet.line(stress_block.BETA_1)
-        for clause, what in pair.changed:
+        for clause, what in (*pair.changed, *(pair.changed_beyond if whole_beam else ())):
             _record_change(sheet, pair, clause, what)
 
 

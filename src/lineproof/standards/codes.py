@@ -13,13 +13,15 @@ class CodePair:
     """One locked pair.
 
     ``changed`` lists (clause, what) of rules known to differ from A23.3-14 whose new text must be
-    confirmed by the office in its own copy before they are relied on.
+    confirmed by the office in its own copy before they are relied on; ``changed_beyond`` those of
+    shear, anchorage and deflection, which not every calculation uses.
     """
 
     name: str
     building: str
     concrete: str
     changed: tuple[tuple[str, str], ...] = ()
+    changed_beyond: tuple[tuple[str, str], ...] = ()
 
 
 _DUCTILITY = ("10.5.2", "limit of c/d: changed since A23.3-14")
@@ -28,13 +30,24 @@ _UNSEEN = (
     ("NBC 4.1.5.3", "specified live loads: this edition has not been seen"),
     ("10.1.7", "stress block: assumed unchanged"),
 )
+_SHEAR = ("11.3", "shear: simplified and general method updated since A23.3-14")
+_ANCHORAGE = (
+    ("12.2", "development of straight bars: this edition has not been seen"),
+    ("12.5", "hooks: a new form, with the bar diameter to the power 1.5"),
+)
 
 CODE_PAIRS = {
     pair.name: pair
     for pair in (
         CodePair("NBC 2015 + A23.3-14", "NBC 2015", "CSA A23.3-14"),
-        CodePair("NBC 2020 + A23.3:19", "NBC 2020", "CSA A23.3:19", (_DUCTILITY,)),
-        CodePair("NBC 2025 + A23.3:24", "NBC 2025", "CSA A23.3:24", (_DUCTILITY, *_UNSEEN)),
+        CodePair("NBC 2020 + A23.3:19", "NBC 2020", "CSA A23.3:19", (_DUCTILITY,), (_SHEAR,)),
+        CodePair(
+            "NBC 2025 + A23.3:24",
+            "NBC 2025",
+            "CSA A23.3:24",
+            (_DUCTILITY, *_UNSEEN),
+            (_SHEAR, *_ANCHORAGE),
+        ),
     )
 }
 

@@ -7,12 +7,16 @@ from dataclasses import replace
 from typing import Any
 
 from lineproof.beams import basics
-from lineproof.beams.continuous import flexure
+from lineproof.beams.continuous import flexure, interface
 from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.anchorage_chapter import COVERAGE, record_anchorage
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
-from lineproof.beams.continuous.deflections import SERVICE, record_deflections
+from lineproof.beams.continuous.deflections import (
+    SERVICE,
+    record_deflections,
+    refuse_deflections,
+)
 from lineproof.beams.continuous.deliverables import SCHEDULE, record_schedule
 from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
 from lineproof.beams.continuous.geometry import record_spans
@@ -35,6 +39,13 @@ from lineproof.sheet import Sheet
 from lineproof.standards.codes import CodePair
 
 LOADS_CALL, SPANS_CALL, ANALYSIS_CALL = "beam.loads()", "beam.spans()", "beam.analysis()"
+NOT_HERE = (
+    {"check": "Concentrated live loads, unless given as loads", "clause": "NBC 4.1.5.9"},
+    {"check": "Structural integrity of the building", "clause": "NBC 4.1.1.3"},
+    {"check": "Vibration of the floor", "clause": "NBC 4.1.3.6"},
+    {"check": "Drift of the building on gravity beams", "clause": "21.11"},
+    {"check": "The slab, the girders and the columns", "clause": "their own calculations"},
+)
 _BEFORE_DESIGN = ("continuous_beam(...)", LOADS_CALL, SPANS_CALL, ANALYSIS_CALL)
 """Calls whose parts the design rests on."""
 QuantityOrList = QuantityInput | Sequence[QuantityInput]
@@ -115,6 +126,7 @@ class ContinuousBeam:
 
     def deflections(self) -> None:
         """Record the deflections of every span."""
+        refuse_deflections(self.inputs)
         with self.sheet.chapter("beam.deflections()"):
             record_deflections(self.model)
 
@@ -201,10 +213,22 @@ def continuous_beam(
     sheet.member = member_of(inputs)
     beam = ContinuousBeam(sheet, inputs, pair)
     sheet.expect(calls_of(inputs))
-    sheet.not_covered = not_covered(inputs)
+    sheet.not_covered = [*not_covered(inputs), *not_here(inputs)]
     load_take_down.record_given(sheet, inputs)
-    basics.record_materials(sheet, inputs.density, inputs.grade, pair)
+    basics.record_materials(sheet, inputs.density, inputs.grade, pair, whole_beam=True)
     return beam
+
+
+def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
+    """Return the checks of a complete calculation that are made elsewhere, or not at all."""
+    rows = [dict(row) for row in NOT_HERE]
+    if inputs.slab and inputs.slab_bars is None:
+        rows.append(dict(interface.NOT_COVERED))
+    if inputs.shape == "L" and not inputs.torques and inputs.forces_file is None:
+        rows.append({"check": "Torsion from the slab: no torque is given", "clause": "11.3.10"})
+    if not inputs.slab:
+        rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
+    return [*rows]
 
 
 def member_of(inputs: ContinuousInputs) -> str:

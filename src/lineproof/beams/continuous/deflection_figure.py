@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from lineproof.beams.continuous.deflection import (
     Behind,
     History,
@@ -53,7 +55,8 @@ def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[Defle
     model = design.model
     section = _section(model, span, behind)
     service = service_of(model, span)
-    moments = {stage: service.stages[stage] for stage in STAGES}
+    before = _earlier(model, span)
+    moments = {stage: replace(service.stages[stage], earlier=before) for stage in STAGES}
     made = deflections(section, moments, carries=model.inputs.carries, history=History())
     behind[span] = Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})
     shapes = deflected_shapes(section, moments, made)
@@ -62,6 +65,14 @@ def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[Defle
         DeflectionPiece(span, x, w.tolist())
         for w in (shapes.immediate, shapes.attached, shapes.total)
     )
+
+
+def _earlier(model: Model, span: int) -> tuple[float, float, float]:
+    """Return the recorded moments of a construction stage: at midspan, left, right [N.mm]."""
+    key = f"deflection-{span}-construction"
+    entries = next((part.entries for part in model.sheet.parts if part.key == key), {})
+    values = [entries[n].value if n in entries else 0.0 for n in ("M_aem", "M_ae1", "M_ae2")]
+    return values[0], values[1], values[2]
 
 
 def _section(model: Model, span: int, behind: dict[int, Behind]) -> SpanSection:

@@ -19,12 +19,29 @@ from lineproof.beams.continuous.deflection_service import (
     sustained_share,
 )
 from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model, SingleLoad
-from lineproof.beams.continuous.service import service_lines
+from lineproof.beams.continuous.service import record_construction, service_lines
+from lineproof.beams.steps import Steps
+from lineproof.errors import UserError
 from lineproof.record import Entry
 
 SERVICE = "service"
+_CONSTRUCTION = (
+    "The forms are struck or shores of the floor above stand on the beam: dead load and the "
+    "construction load act on all spans. The largest moment reached so far cracks the section for "
+    "all later stages. The full dead load is taken, superimposed load included."
+)
 _SPAN = ("l", "l_n", "h", "I_g", "y_b")
+
+
+def refuse_deflections(inputs: ContinuousInputs) -> None:
+    """Refuse deflections of moments that were brought in: they need the load types apart."""
+    if inputs.forces_file is not None:
+        raise UserError(
+            "forces_csv: deflections need the moments by load type, which a frame analysis does "
+            "not give; leave beam.deflections() out, the package lists them as not covered"
+        )
 
 
 def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
@@ -39,13 +56,25 @@ def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
         made[span] = record_deflection(
             model.sheet,
             entries,
-            service_lines(model, service, entries.behind),
+            service_lines(model, service, entries.behind, _earlier(model, span)),
             carries=model.inputs.carries,
             lifting=service.lifting,
             arrangement=service.arrangement,
             calculate=span in wanted,
         )
     return made
+
+
+def _earlier(model: Model, span: int) -> dict[str, Entry]:
+    """Record the moments of the construction stage, if there is one that the span feels."""
+    if model.inputs.construction_load is None or model.forces.beam.cantilever(span):
+        return {}
+    title = f"Deflection of span {span}: construction stage"
+    with model.sheet.part(f"deflection-{span}-construction", title):
+        model.sheet.note(
+            "construction", _CONSTRUCTION, title="Construction stage", clause="9.8.2.3"
+        )
+        return record_construction(Steps(model.sheet, {}), model, span)
 
 
 def shares_of(model: Model) -> dict[str, float]:

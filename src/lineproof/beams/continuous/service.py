@@ -14,41 +14,70 @@ from lineproof.beams.continuous.deflection_record import WORDS, Moments
 from lineproof.beams.continuous.deflection_service import ServiceMoments, Stage
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.groups import Group, moment_name, named
-from lineproof.beams.continuous.model import ANALYSIS, Model, SingleLoad
+from lineproof.beams.continuous.model import ANALYSIS, LOADS, Model, SingleLoad
 from lineproof.beams.continuous.symbols import code, stated
 from lineproof.beams.steps import Steps
+from lineproof.errors import UserError
 from lineproof.record import Entry
 
 Factors = Mapping[Row, float]
 
 
-def service_lines(model: Model, service: ServiceMoments, behind: int | None) -> Moments:
+def service_lines(
+    model: Model,
+    service: ServiceMoments,
+    behind: int | None,
+    earlier: Mapping[str, Entry] | None = None,
+) -> Moments:
     """Return what records the moments of a stage: of the span, or of a cantilever's root.
 
-    ``behind`` is the span behind a cantilever, whose moments count as well.
+    ``behind`` is the span behind a cantilever, whose moments count as well; ``earlier`` binds the
+    moments of a construction stage.
     """
 
     def record(steps: Steps, stage: Stage) -> None:
         span, factors = service.span, service.factors[stage]
+        steps.bind(**dict(earlier or {}))
         if not service.free:
-            _Lines(steps, model, factors, stage, span).record_span("M_h1", "M_h2", "M_m", "w_s")
+            _Lines(steps, model, factors, WORDS[stage], span).record_span(
+                "M_h1", "M_h2", "M_m", "w_s"
+            )
             return
         root: End = "right" if service.free == "left" else "left"
-        _Lines(steps, model, factors, stage, span).record_end(root, "M_h", "at the root")
+        _Lines(steps, model, factors, WORDS[stage], span).record_end(root, "M_h", "at the root")
         if behind is not None:
-            lines = _Lines(steps, model, factors, stage, behind)
+            lines = _Lines(steps, model, factors, WORDS[stage], behind)
             lines.record_behind("left" if service.free == "left" else "right")
 
     return record
 
 
+def record_construction(steps: Steps, model: Model, span: int) -> dict[str, Entry]:
+    """Record inside the open part the moments of the construction stage; return them by symbol.
+
+    Dead load and the construction load on all spans. The moments by live load on single spans,
+    all uniform, are scaled to the construction load. Raises :class:`UserError` where single live
+    loads stand on the beam, which cannot be scaled.
+    """
+    if any(load.kind in LIVE for load in model.single):
+        raise UserError(
+            "construction_load: the moments of single live loads cannot be scaled to it; leave it "
+            "out, or give the single live loads as dead load of a calculation of that stage"
+        )
+    lines = _Lines(
+        steps, model, {("D", k): 1.0 for k in range(1, model.spans + 1)}, _BUILDING, span
+    )
+    return lines.record_earlier()
+
+
+_BUILDING = "dead and construction load"
+
+
 class _Lines:
     """The moments of one stage on one span."""
 
-    def __init__(
-        self, steps: Steps, model: Model, factors: Factors, stage: Stage, span: int
-    ) -> None:
-        self.steps, self.model, self.span, self.words = steps, model, span, WORDS[stage]
+    def __init__(self, steps: Steps, model: Model, factors: Factors, words: str, span: int) -> None:
+        self.steps, self.model, self.span, self.words = steps, model, span, words
         self.on_span = {kind: f for (kind, k), f in factors.items() if k == span and f}
         self.by_group = {
             Group(kind, k if kind in LIVE else 0): f for (kind, k), f in factors.items() if f
@@ -95,6 +124,36 @@ class _Lines:
         root: End = free
         names = {root: "M_hb", ("right" if root == "left" else "left"): "M_ho"}
         self.record_span(names["left"], names["right"], "M_mb", "w_sb")
+
+    def record_earlier(self) -> dict[str, Entry]:
+        """Record moments of dead load and a load per length ``w_cn`` on all spans."""
+        entries = self.model.sheet.entries_of(ANALYSIS)
+        w_cn = self.model.sheet.entry(f"{LOADS}/w_cn")
+        self.names["w_cn"] = w_cn
+        kind = self.model.inputs.live_kind
+        ends = []
+        sides: tuple[tuple[End, str], ...] = (("left", "M_ae1"), ("right", "M_ae2"))
+        for end, symbol in sides:
+            if not self._any(end):
+                continue
+            dead = moment_name(self.model, Group("D", 0), self.span, end)
+            self.names[dead] = entries[dead]
+            terms = []
+            for k in range(1, self.model.spans + 1):
+                name = moment_name(self.model, Group(kind, k), self.span, end)
+                if name:
+                    load = f"w_{code(kind)}{k}"
+                    self.names |= {name: entries[name], load: self.model.uniform[kind, k]}
+                    terms.append(f"{name}/{load}")
+            text = f"{symbol} = -({dead} + w_cn*({' + '.join(terms)}))"
+            ends.append(self._line(text, "kN.m", f"Hogging moment at the {end} support"))
+        w_D = f"w_D{self.span}"
+        self.names[w_D] = self.model.uniform["D", self.span]
+        terms = [f"({w_D} + w_cn)*l**2/8", *(self._at_middle(load) for load in self._single())]
+        terms += [f"-({' + '.join(e.symbol for e in ends)})/2"] if ends else []
+        text = f"M_aem = {' + '.join(terms)}".replace("+ -", "- ")
+        middle = self._line(text, "kN.m", "Moment at midspan")
+        return {entry.symbol: entry for entry in (*ends, middle)}
 
     def _any(self, end: End) -> bool:
         return any(moment_name(self.model, g, self.span, end) for g in self.by_group)

@@ -17,6 +17,7 @@ from lineproof.beams.continuous.figure_envelope import (
     shear_figure,
 )
 from lineproof.beams.continuous.figure_loads import loads_figure
+from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
 from lineproof.beams.continuous.model import GIVEN, LOADS, Model
 from lineproof.beams.continuous.resistance import provide, stand
 from lineproof.beams.continuous.resistance_demand import stretch_at
@@ -67,8 +68,10 @@ def record_summary(design: Design) -> None:
             _table(sheet, key, title, columns, rows, TABLES + number, widths=widths)
         _record_loads(model)
         columns, rows = reaction_table(model)
-        _table(sheet, "reactions", "Reactions, unfactored, by load type", columns, rows, REACTIONS,
-               csv="reactions")  # fmt: skip
+        title = "Reactions, unfactored, by load type"
+        if model.imported is not None:
+            title = REACTIONS_TITLE
+        _table(sheet, "reactions", title, columns, rows, REACTIONS, csv="reactions")
         _record_envelopes(design)
 
 

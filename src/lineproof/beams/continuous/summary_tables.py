@@ -13,6 +13,7 @@ from lineproof.beams.continuous.flexure import (
     nominally_simple,
     sagging_spans,
 )
+from lineproof.beams.continuous.imported_record import imported_reactions
 from lineproof.beams.continuous.model import ANALYSIS, Model
 from lineproof.beams.continuous.restraint import worst_case
 from lineproof.beams.continuous.symbols import KINDS, code
@@ -171,7 +172,13 @@ def unit_word(unit: str) -> str:
 
 
 def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
-    """Return the unfactored reactions by load type, for whoever designs what carries the beam."""
+    """Return the unfactored reactions by load type, for whoever designs what carries the beam.
+
+    Of forces that were brought in, the largest and smallest reaction of their cases.
+    """
+    if model.imported is not None:
+        columns, cells = imported_reactions(model)
+        return columns, [Row(tuple(row), None) for row in cells]
     entries = model.sheet.entries_of(ANALYSIS)
     kinds = [
         kind for kind in KINDS if any(f"R_{j}{code(kind)}" in entries for j in _supports(model))
