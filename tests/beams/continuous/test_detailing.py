@@ -312,3 +312,26 @@ def test_long_span_is_lapped_at_its_quarter_points() -> None:
         assert first.end - second.start >= 996.7
     assert corners
     assert covered(designed, tuple(lay_bars(designed)), 500).holds
+
+
+def test_record_without_a_shear_design() -> None:
+    """No stirrups counted against the tension, no bar cut in a tension zone."""
+    designed = replace(three_spans(), shear=())
+    runs = lay_bars(designed)
+    sheet = sheet_of(designed)
+    record_detailing(writers_of(sheet, designed), runs, 200)
+    record = sheet.close()
+    made = entries(record.data)
+    assert list(faults(record.data)) == []
+    assert not any(key.endswith(("cut-low-shear", "cut-double-area")) for key in made)
+    assert made["anchorage-end-1-bottom/V_s"]["printed"]["result"] == "0"
+
+
+def test_force_at_the_end_as_given() -> None:
+    """F_le of the shear design is taken as it is; too large a force fails."""
+    for force, held in ((200e3, True), (700e3, False)):
+        designed = replace(three_spans(), end_forces={1: force, 4: force})
+        sheet = sheet_of(designed)
+        record_detailing(writers_of(sheet, designed), lay_bars(designed), 100)
+        made = entries(sheet.close().data)
+        assert made["anchorage-end-1-bottom/bars-end-support"]["holds"] == held

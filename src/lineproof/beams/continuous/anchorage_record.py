@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
+from decimal import Decimal
 
 from lineproof.beams.continuous.anchorage import (
     OTHER_ROW,
@@ -19,6 +20,7 @@ from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import lap_pairs
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
+from lineproof.quantity import Typed
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars as bar_clause
@@ -29,9 +31,12 @@ BY_TABLE = "The development length is that of the table; the general expression 
 BY_GENERAL = "The development length is that of the general expression; the table stands beside it."
 
 
-def plain(value: float, unit: str) -> str:
-    """Return a number as it is typed, with 12 digits at most."""
-    return f"{value:.12g} {unit}".strip()
+def plain(value: float, unit: str) -> str | Typed:
+    """Return a number as it is typed, with 12 digits at most; lengths are read already."""
+    text = f"{value:.12g}"
+    if unit != "mm" or "e" in text:
+        return f"{text} {unit}".strip()
+    return Typed(f"{text} mm", text, "mm", Decimal(text), float(text))
 
 
 def forces_as_given(steps: Steps, demand: Demand, near: End, x: Entry | None = None) -> None:
@@ -67,6 +72,8 @@ class Writers:
     span: Callable[[int], Mapping[str, Entry]]
     forces: Callable[[Steps, Demand, End, Entry | None], None] = forces_as_given
     shear: Callable[[Steps, ShearStretch], None] = shear_as_given
+    sizes: Mapping[str, Entry] = field(default_factory=dict)
+    """Diameters and areas that are recorded already, ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
 
 
 Lengths = Mapping[Bar, Mapping[str, Entry]]
@@ -94,6 +101,15 @@ def record_lengths(writers: Writers, runs: Iterable[BarRun]) -> Lengths:
         bar = key_of(designed, run)
         if bar not in made:
             made[bar] = _record_bar(writers, bar, len(made) + 1)
+    return made
+
+
+def sizes_of(lengths: Lengths) -> dict[str, Entry]:
+    """Return the diameters and areas of all bars whose development is recorded, and d_bs."""
+    made: dict[str, Entry] = {}
+    for bar, entries in lengths.items():
+        made[f"d_b {bar.size}"], made[f"A_b {bar.size}"] = entries["d_b"], entries["A_b"]
+        made["d_bs"] = entries["d_bs"]
     return made
 
 

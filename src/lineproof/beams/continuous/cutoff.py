@@ -7,7 +7,7 @@ that top bars run away from.
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Sequence
+from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
 from typing import Literal
 
@@ -18,13 +18,13 @@ from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import (
+    Standing,
     area_for,
     distance_of,
     moment_of,
     provide,
     section_depth,
     shear_depth,
-    stand,
 )
 from lineproof.beams.continuous.resistance_cover import ratios, yield_force
 from lineproof.beams.continuous.resistance_demand import (
@@ -75,6 +75,24 @@ def floor50(t: float) -> float:
 def ceil50(t: float) -> float:
     """Return a distance up to the module."""
     return math.ceil(t / STEP - 1e-9) * STEP
+
+
+def least_step(count: int, enough: Callable[[int], bool]) -> int | None:
+    """Return the least of ``count`` steps that is enough, by halving; None where none is.
+
+    A step further is never worse.
+    """
+    if count <= 0:
+        return None
+    if enough(0):
+        return 0
+    low, high = 0, count - 1
+    if high == 0 or not enough(high):
+        return None
+    while high - low > 1:
+        middle = (low + high) // 2
+        low, high = (low, middle) if enough(middle) else (middle, high)
+    return high
 
 
 def axis_of(designed: Designed, span: int, near: End) -> float:
@@ -185,7 +203,7 @@ def far_face(designed: Designed, span: int, near: End) -> float:
 
 def sag_at(designed: Designed, span: int) -> float:
     """Return where the largest moment of a span stands along the beam."""
-    return designed.outline.axes[span - 1] + designed.forces.sag(span).x
+    return designed.outline.axes[span - 1] + designed.sags[span - 1].x
 
 
 def reach(designed: Designed, span: int) -> float:
@@ -245,32 +263,59 @@ def zone_at(
     designed: Designed, face: Face, span: int, near: End, t: float, continuing: Sequence[BarRun]
 ) -> Zone:
     """Return by which rule of 12.10.5 bars may end at t, "" where they may not."""
-    M, V = designed.forces.pairs(span, local(designed, span, near, t))
-    M_f = float((M if face == "bottom" else -M).max())
+    return zones_at(designed, face, span, near, [t], continuing)[0]
+
+
+def zones_at(
+    designed: Designed,
+    face: Face,
+    span: int,
+    near: End,
+    places: Sequence[float],
+    continuing: Sequence[BarRun],
+) -> list[Zone]:
+    """Return by which rule of 12.10.5 bars may end at each of the distances."""
+    x = np.array([local(designed, span, near, t) for t in places])
+    M, V = designed.forces.along(span, x)
+    M_f = (M if face == "bottom" else -M).max(axis=0)
+    V_f = np.abs(V).max(axis=0)
+    made: list[Zone] = []
+    for t, moment, shear in zip(places, M_f.tolist(), V_f.tolist(), strict=True):
+        V_r = stretch_at(designed, along(designed, span, near, t)).V_r
+        made.append(_zone(designed, face, span, (moment, shear, V_r), continuing))
+    return made
+
+
+def _zone(
+    designed: Designed,
+    face: Face,
+    span: int,
+    forces: tuple[float, float, float],
+    continuing: Sequence[BarRun],
+) -> Zone:
+    M_f, V_f, V_r = forces
     if M_f <= NOTHING:
         return "compression"
-    V_f = float(np.abs(V).max())
-    V_r = stretch_at(designed, along(designed, span, near, t)).V_r
     if holds(clause.CUT_AT_LOW_SHEAR, V_f=V_f, V_r=V_r):
         return "low shear"
+    if not holds(clause.CUT_AT_MODERATE_SHEAR, V_f=V_f, V_r=V_r):
+        return ""
     A_co, lever = full_area(designed, continuing)
     d = designed.outline.depths[span - 1] - lever
     b = designed.outline.widths[span - 1] if face == "bottom" else designed.outline.b_w
     double = holds(clause.CUT_AT_DOUBLE_AREA, A_sr=area_for(designed, M_f, d, b), A_co=A_co)
-    if double and holds(clause.CUT_AT_MODERATE_SHEAR, V_f=V_f, V_r=V_r):
-        return "double area"
-    return ""
+    return "double area" if double else ""
 
 
 def worst_between(
-    frame: Frame, runs: Sequence[BarRun], face: Face, span: int, bounds: tuple[float, float]
+    frame: Frame, bars: Sequence[Standing], face: Face, span: int, bounds: tuple[float, float]
 ) -> float:
     """Return the worst ratio of a face between two places along the beam, at design stations.
 
     The places where the developed area changes its slope are looked at as well.
     """
     designed, demand = frame.designed, frame.demands[span - 1]
-    standing = [s for s in stand(designed, runs) if s.run.face == face]
+    standing = [s for s in bars if s.run.face == face]
     kinks = [
         x
         for s in standing

@@ -62,9 +62,10 @@ def begin(writers: Writers, sheet: Sheet, span: int, face: Face) -> Steps:
     place |= {"b": b_w, "b_w": b_w}
     if face == "bottom" and outline.h_f:
         place |= {"b": place["b_f"], "h_f": sheet.find("h_f")}
-    steps = Steps(sheet, place)
-    stirrup = writers.designed.basis.stirrups.size
-    steps.bind(d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
+    steps = Steps(sheet, place | dict(writers.sizes))
+    if "d_bs" not in steps.place:
+        stirrup = writers.designed.basis.stirrups.size
+        steps.bind(d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
     return steps
 
 
@@ -83,12 +84,22 @@ def record_area(steps: Steps, groups: Iterable[Group], total: str, *, depth: boo
 
 def _record_group(steps: Steps, group: Group, mark: str, symbol: str) -> Entry:
     sheet = steps.sheet
-    d_b = sheet.lookup(f"d_b{mark}", BARS, group.size, "d_b", title="diameter of the bar")
-    A_b = sheet.lookup(f"A_b{mark}", BARS, group.size, "A_b", title="area of one bar")
+    d_b, A_b = (_of_size(steps, name, mark, group.size) for name in ("d_b", "A_b"))
     number = f"n_{mark}" if mark else "n_b"
     n = sheet.given(number, str(group.number), "number of bars as laid", source="as laid")
     steps.bind(**{f"d_b{mark}": d_b})
     return steps.line(clause.AREA_OF_BARS, symbol, n_b=n, A_b=A_b)
+
+
+def _of_size(steps: Steps, name: str, mark: str, size: str) -> Entry:
+    """Return a diameter or area of bars: where it stands already, else looked up here."""
+    known = steps.place.get(f"{name} {size}")
+    if known is not None:
+        return known
+    title = "diameter of the bar" if name == "d_b" else "area of one bar"
+    made = steps.sheet.lookup(f"{name}{mark}", BARS, size, name, title=title)
+    steps.bind(**{f"{name} {size}": made})
+    return made
 
 
 def _summed(
@@ -119,8 +130,7 @@ def _record_depth(steps: Steps, group: Group, symbol: str, mark: str) -> Entry:
         return steps.line(
             clause.DEPTH_ONE_LAYER if symbol == "d" else clause.DEPTH_FIRST, symbol, d_b=d_b
         )
-    sheet = steps.sheet
-    below = sheet.lookup(f"d_bf{mark}", BARS, group.first, "d_b", title="bars of the first layer")
+    below = _of_size(steps, "d_b", f"f{mark}", group.first)
     thicker = below if BARS.number(group.first, "d_b") >= BARS.number(group.size, "d_b") else d_b
     first = steps.line(clause.DEPTH_FIRST, f"d_f{mark}", d_b=below)
     s_l = steps.line(clause.LAYER_DISTANCE, f"s_l{mark}", d_b=thicker)

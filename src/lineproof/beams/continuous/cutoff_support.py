@@ -204,7 +204,9 @@ def _record_inflection(site: Site, point: Point) -> None:
     past = record_extension(site, steps, point.t, side.t_kept, side.kept)
     past.line(clause.LENGTH_PAST_INFLECTION)
     past.check(clause.LONG_PAST_INFLECTION)
-    A_pi = record_area(Steps(sheet, {}), grouped(writers, side.kept), "A_pi", depth=False)
+    A_pi = record_area(
+        Steps(sheet, writers.sizes), grouped(writers, side.kept), "A_pi", depth=False
+    )
     past.bind(A_pi=A_pi, A_s=site.section["A_s"])
     past.check(clause.TOP_PAST_INFLECTION)
 

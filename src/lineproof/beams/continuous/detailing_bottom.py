@@ -35,17 +35,19 @@ from lineproof.beams.continuous.cutoff import (
     floor50,
     full_moment,
     half_of,
+    least_step,
     local,
     no_further_need,
     sag_at,
     support_of,
     worst_between,
-    zone_at,
+    zones_at,
 )
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
+from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.resistance_cover import yield_force
 from lineproof.beams.continuous.resistance_demand import demand_at, end_tension
 from lineproof.standards.a23_3 import cutoff as clause
@@ -256,14 +258,24 @@ def _cut(
     middle = sag_at(designed, span)
     face = axis_of(designed, span, near) + (half if near == "left" else -half)
     bounds = (min(face, middle), max(face, middle))
-    while t - half + INTO_SUPPORT >= LEAST_SAVED:
-        cut = _ended(designed, span, near, run, t)
-        tried = [*runs[:index], cut, *runs[index + 1 :]]
-        allowed = zone_at(designed, "bottom", span, near, t, continuing)
-        if allowed and worst_between(frame, tried, "bottom", span, bounds) <= MARGIN:
-            return cut, point
-        t -= STEP
-    return None
+
+    def tried(steps: int) -> BarRun:
+        return _ended(designed, span, near, run, t - steps * STEP)
+
+    standing = stand(designed, runs)
+
+    def enough(steps: int) -> bool:
+        moved = replace(standing[index], run=tried(steps))
+        made = (*standing[:index], moved, *standing[index + 1 :])
+        return worst_between(frame, made, "bottom", span, bounds) <= MARGIN
+
+    count = int((t - half + INTO_SUPPORT - LEAST_SAVED) // STEP) + 1
+    first = least_step(count, enough)
+    if first is None:
+        return None
+    places = [t - steps * STEP for steps in range(first, count)]
+    zones = zones_at(designed, "bottom", span, near, places, continuing)
+    return next(((tried(first + i), point) for i, zone in enumerate(zones) if zone), None)
 
 
 def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:

@@ -7,10 +7,11 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field
+from functools import cached_property
 from typing import Literal
 
 from lineproof.beams.bars import BarLayers
-from lineproof.beams.continuous.forces import Forces
+from lineproof.beams.continuous.forces import Demand, Forces
 from lineproof.beams.continuous.layout import BeamOutline
 from lineproof.standards.codes import CodePair
 
@@ -80,7 +81,7 @@ class ShearStretch:
     theta: float = THETA
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, eq=False)
 class Basis:
     """What a development length depends on besides the bar itself."""
 
@@ -120,6 +121,11 @@ class Designed:
     def strengths(self) -> Strengths:
         """The strengths."""
         return self.basis.strengths
+
+    @cached_property
+    def sags(self) -> tuple[Demand, ...]:
+        """The largest moment of every span, between the faces."""
+        return tuple(self.forces.sag(k) for k in range(1, len(self.outline.lengths) + 1))
 
     def cantilever(self, span: int) -> bool:
         """Whether a span is a cantilever."""

@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from lineproof.beams.continuous.anchorage_record import (
     Lengths,
     Writers,
     record_laps,
     record_lengths,
+    sizes_of,
 )
 from lineproof.beams.continuous.cutoff import Frame
 from lineproof.beams.continuous.cutoff_ends import Runs, bottom_side, top_side
@@ -37,6 +40,7 @@ def record_detailing(writers: Writers, runs: Runs, count: int = COUNT) -> Covera
     designed = writers.designed
     frame = Frame.of(designed)
     lengths = record_lengths(writers, runs)
+    writers = replace(writers, sizes=sizes_of(lengths))
     hooked = record_hooks(writers, runs)
     for span in range(1, len(designed.outline.lengths) + 1):
         _record_bottom(writers, frame, lengths, hooked, runs, span)

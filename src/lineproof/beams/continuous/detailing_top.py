@@ -25,11 +25,12 @@ from lineproof.beams.continuous.cutoff import (
     far_face,
     full_moment,
     half_of,
+    least_step,
     no_further_need,
     reach,
     support_of,
     worst_between,
-    zone_at,
+    zones_at,
 )
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
 from lineproof.beams.continuous.detailing_data import Designed
@@ -37,6 +38,7 @@ from lineproof.beams.continuous.detailing_holders import holder, joined, with_ho
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
+from lineproof.beams.continuous.resistance import Standing, stand
 from lineproof.standards.a23_3 import cutoff as clause
 
 ALIKE = 1.2
@@ -112,7 +114,7 @@ def _fill(frame: Frame, span: int, reaches: dict[int, dict[End, Reach]]) -> None
     length = ceil50(designed.outline.lengths[span - 1])
     while meeting:
         runs = [r for s, _ in ends for r in _placed_all(designed, s, reaches[s])]
-        if worst_between(frame, runs, "top", span, bounds) <= MARGIN:
+        if worst_between(frame, stand(designed, runs), "top", span, bounds) <= MARGIN:
             return
         if all(reaches[s][e].short >= length for s, e in meeting):
             return
@@ -226,21 +228,31 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
         long, through = designed.outline.lengths[span - 1] - designed.end_cover, False
     else:
         long, through = _long(frame, span, near, groups, inflection)
-    work = Work(frame, span, near, groups, number, own)
+    work = Work.of(frame, (span, near), groups, number, own)
     short = long
     if number < len(groups):
         long, short = _short(work, long)
-    while not through and not designed.cantilever(span):
-        if _worst(work, (long, short)) <= MARGIN:
-            break
-        short = short + STEP if short == long else short
-        long += STEP
-        through = long >= most
+    if not through and not designed.cantilever(span):
+        long, short, through = _lengthened(work, long, short, most)
     if through:
         whole = short >= long
         long = _meeting(work)
         short = long if whole else short
     return Reach(long, min(short, long), through)
+
+
+def _lengthened(work: Work, long: float, short: float, most: float) -> tuple[float, float, bool]:
+    """Return the bars longer by as much as they need; True where they reach the next support."""
+
+    def enough(steps: int) -> bool:
+        added = steps * STEP
+        return _worst(work, (long + added, short + added if short == long else short)) <= MARGIN
+
+    steps = least_step(max(int((most - long) // STEP) + 1, 1), enough)
+    if steps is None:
+        return long, short, True
+    added = steps * STEP
+    return long + added, short + added if short == long else short, long + added >= most
 
 
 def _meeting(work: Work) -> float:
@@ -276,6 +288,34 @@ class Work:
     groups: tuple[BarRun, ...]
     number: int
     own: float
+    standing: tuple[Standing, ...]
+    holder: Standing | None
+
+    @classmethod
+    def of(
+        cls,
+        frame: Frame,
+        place: tuple[int, End],
+        groups: tuple[BarRun, ...],
+        number: int,
+        own: float,
+    ) -> Work:
+        """Return the work at a span and the near support, with the bars as far as they stand."""
+        designed, (span, near) = frame.designed, place
+        support, side = support_of(span, near), other(near)
+        runs = []
+        for run in groups:
+            there = _placed(side, run, along(designed, span, near, own))
+            if designed.forces.has_span(support, near):
+                far = along(designed, span, near, -2 * designed.stock)
+                runs.append(_placed(near, there, far))
+            else:
+                runs.append(_end(designed, support, near, there, None))
+        held = None
+        if not designed.cantilever(span):
+            held = stand(designed, [holder(designed, span, near, own)])[0]
+        standing = tuple(stand(designed, [run])[0] for run in runs)
+        return cls(frame, span, near, groups, number, own, standing, held)
 
 
 def past_inflection(designed: Designed, span: int, near: End, d_b: float) -> float:
@@ -317,35 +357,35 @@ def _short(work: Work, long: float) -> tuple[float, float]:
         long = max(long, ceil50(point.t + past))
     elif long - point.t < past:
         return long, long
-    while short < long - LEAST_STEP:
-        allowed = zone_at(designed, "top", span, near, short, continuing)
-        if allowed and _worst(work, (long, short)) <= MARGIN:
-            return long, short
-        short += STEP
-    return long, long
+
+    def enough(steps: int) -> bool:
+        return _worst(work, (long, short + steps * STEP)) <= MARGIN
+
+    count = int(-((short - long + LEAST_STEP) // STEP))
+    first = least_step(count, enough)
+    if first is None:
+        return long, long
+    places = [short + steps * STEP for steps in range(first, count)]
+    zones = zones_at(designed, "top", span, near, places, continuing)
+    return long, next((t for t, zone in zip(places, zones, strict=True) if zone), long)
 
 
 def _worst(work: Work, reaches: tuple[float, float]) -> float:
     """Return the worst ratio of these bars and those that hold the stirrups, in their part."""
     designed, span, near = work.frame.designed, work.span, work.near
-    support = support_of(span, near)
     side = other(near)
-    runs = []
-    for index, run in enumerate(work.groups):
+    bars = []
+    for index, standing in enumerate(work.standing):
         t = reaches[0] if index < work.number else reaches[1]
-        there = _placed(side, run, along(designed, span, near, t))
-        if designed.forces.has_span(support, near):
-            far = along(designed, span, near, -2 * designed.stock)
-            runs.append(_placed(near, there, far))
-        else:
-            runs.append(_end(designed, support, near, there, None))
-    if not designed.cantilever(span):
+        run = _placed(side, standing.run, along(designed, span, near, t))
+        bars.append(replace(standing, run=run))
+    if work.holder is not None:
         held = holder(designed, span, near, reaches[0])
-        if held.size == runs[0].size:  # they will be one bar with the corners
+        if held.size == bars[0].run.size:  # they will be one bar with the corners
             far = held.end if side == "right" else held.start
-            runs[0] = _placed(side, runs[0], far)
+            bars[0] = replace(bars[0], run=_placed(side, bars[0].run, far))
         else:
-            runs.append(held)
+            bars.append(replace(work.holder, run=held))
     half = half_of(designed, span, near)
     x = sorted(along(designed, span, near, t) for t in (half, work.own))
-    return worst_between(work.frame, runs, "top", span, (x[0], x[1]))
+    return worst_between(work.frame, bars, "top", span, (x[0], x[1]))

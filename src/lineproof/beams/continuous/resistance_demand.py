@@ -163,7 +163,7 @@ def largest(designed: Designed, face: Face, span: int, end: End) -> float:
 def largest_at(designed: Designed, face: Face, span: int, end: End) -> Demand:
     """Return where and in which case that moment stands."""
     if face == "bottom":
-        return designed.forces.sag(span)
+        return designed.sags[span - 1]
     left, right = designed.forces.beam.faces(span)
     middle = (left + right) / 2
     a, b = (left, middle) if end == "left" else (middle, right)

@@ -36,7 +36,6 @@ from lineproof.beams.continuous.resistance_cover import (
 )
 from lineproof.beams.continuous.resistance_demand import (
     NOTHING,
-    cap_of,
     demand_at,
     largest_at,
     stretch_at,
@@ -199,7 +198,7 @@ def _record_tension(
     end: End = "left" if station.local < middle else "right"
     d_v = _shear_depth(writers, station, end)
     side = demand_at(designed, station.span, np.array([station.local])).side(face)
-    capped = float(side.free[0]) > cap_of(designed, face, station.span, end)
+    capped = float(side.free[0]) > float(side.cap[0])
     cap = _record_cap(writers, station, end) if capped else None
     title = (
         f"{face.capitalize()} bars: the station that their tension uses most, span {station.span}"

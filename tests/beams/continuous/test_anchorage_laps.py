@@ -1,0 +1,113 @@
+"""Laps: their length and place, the stock length, the room for concrete."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from itertools import pairwise
+
+import pytest
+
+from lineproof.beams.bars import BarLayer
+from lineproof.beams.continuous.anchorage_record import record_laps, record_lengths
+from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars
+from lineproof.beams.continuous.laps import cut_length, has_room, lap_length, room_at_lap, split
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.errors import UserError
+
+from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
+from .laid import beam_of, entries, sheet_of, writers_of
+
+FOUR = (BarLayer(4, "25M"),)
+
+
+def beam(stock: float = 12000.0) -> Designed:
+    """Two spans of 9 m, 4-25M at the bottom."""
+    bare = beam_of((9000.0, 9000.0), ("elastic",) * 3)
+    return replace(bare, bars=SectionBars((FOUR, FOUR), (TopBars(FOUR),) * 3, "15M"), stock=stock)
+
+
+WHOLE = BarRun("bottom", 1, 2, "25M", -150.0, 18150.0, serves="spans 1 to 2")
+
+
+def test_class_b_on_the_module() -> None:
+    """1.3 x 766.7 = 996.7: 1000 mm, half of it 500, at the bottom; 1.3 times that at the top."""
+    assert lap_length(beam(), WHOLE) == 1000.0
+    assert lap_length(beam(), replace(WHOLE, face="top")) == 1300.0
+
+
+def test_bars_within_the_stock_stay_whole() -> None:
+    short = replace(WHOLE, end=11000.0)
+    assert split(beam(), short, [9000.0]) == (short,)
+
+
+def test_lap_over_the_inner_support() -> None:
+    """Centred on the axis at 9 m: 500 mm to either side."""
+    first, second = split(beam(), WHOLE, [9000.0])
+    assert (first.start, first.end, second.start, second.end) == (-150.0, 9500.0, 8500.0, 18150.0)
+    assert first.serves == second.serves == WHOLE.serves
+
+
+def test_other_places_where_no_support_is_within_reach() -> None:
+    """Stock of 8 m from -0.15 m: laps up to 7.35 m, so at 6.6 m, a quarter point.
+
+    From 6.1 m: up to 13.6 m, over the support at 9 m. From 8.5 m: up to 16 m, at 15.6 m.
+    """
+    pieces = split(beam(8000.0), WHOLE, [9000.0], [2400.0, 6600.0, 11400.0, 15600.0])
+    assert [p.end for p in pieces[:-1]] == [7100.0, 9500.0, 16100.0]
+    assert all(p.end - p.start <= 8000 for p in pieces)
+    assert all(a.end - b.start == 1000 for a, b in pairwise(pieces))
+
+
+def test_a_lap_anywhere_as_a_last_resort() -> None:
+    pieces = split(beam(), WHOLE, [])
+    assert [p.end - p.start <= 12000 for p in pieces] == [True, True]
+    assert pieces[0].end - pieces[1].start == 1000
+
+
+def test_hooks_stay_at_their_ends_and_count_for_the_stock() -> None:
+    """Legs of 16 diameters, 403 mm each: 12 m of bars between hooks is too long."""
+    hooked = replace(WHOLE, hook_start="90", hook_end="90")
+    first, second = split(beam(), hooked, [9000.0])
+    assert (first.hook_start, first.hook_end, second.hook_start, second.hook_end) == (
+        "90", "", "", "90",
+    )  # fmt: skip
+    assert cut_length(replace(hooked, end=11850.0)) == pytest.approx(12000 + 2 * 16 * 25.2)
+
+
+def test_thick_bars_are_not_lapped() -> None:
+    with pytest.raises(UserError, match="write bars of 35M or smaller"):
+        split(beam(), replace(WHOLE, size="45M"), [9000.0])
+
+
+def test_room_at_a_lap_by_hand() -> None:
+    """4-25M in 350: s_c = 202.4/3 - 25.2 = 42.27; less one bar 17.07 < 35.28; two: 126.8 wide."""
+    assert room_at_lap(beam(), WHOLE, 4) == pytest.approx(202.4 / 3 - 50.4)
+    assert not has_room(beam(), WHOLE, 4)
+    assert room_at_lap(beam(), WHOLE, 2) == pytest.approx(202.4 - 25.2 - 50.4)
+    assert has_room(beam(), WHOLE, 2)
+
+
+def test_recorded_laps() -> None:
+    """Length against what is laid; without room side by side the bars stand one above the other."""
+    designed = beam()
+    runs = split(designed, WHOLE, [9000.0])
+    sheet = sheet_of(designed)
+    writers = writers_of(sheet, designed)
+    record_laps(writers, record_lengths(writers, runs), runs)
+    record = sheet.close()
+    made = entries(record.data)
+    assert made["anchorage-lap-1/lap-length"]["holds"]
+    assert made["anchorage-lap-1/lap-room"]["kind"] == "decision"
+    assert not made["anchorage-lap-1/lap-room"]["holds"]
+    assert "one above the other" in made["anchorage-lap-1/one-above-the-other"]["text"]
+    assert list(faults(record.data)) == []
+
+
+def test_short_laps_fail() -> None:
+    """600 mm where 997 are due."""
+    designed = beam()
+    runs = (replace(WHOLE, end=9300.0), replace(WHOLE, start=8700.0))
+    sheet = sheet_of(designed)
+    writers = writers_of(sheet, designed)
+    record_laps(writers, record_lengths(writers, runs), runs)
+    assert not entries(sheet.close().data)["anchorage-lap-1/lap-length"]["holds"]
