@@ -18,6 +18,8 @@ from hypothesis import strategies as st
 from lineproof.record import Record, digest_of, recompute
 from lineproof.record.printed_checks import rounds_to
 from lineproof.record.procedures import PROCEDURES
+from lineproof.sheet import Sheet
+from lineproof.sheet.tables import LookupTable
 
 Data = dict[str, Any]
 SRC = Path(__file__).resolve().parents[2] / "src"
@@ -217,3 +219,14 @@ def test_the_record_is_the_same_in_every_process() -> None:
         )
         outputs.add(made.stdout)
     assert len(outputs) == 1
+
+
+def test_a_looked_up_value_is_read_as_the_sheet_read_it() -> None:
+    """7.2 kPa less 7.2 kPa is nothing: float(7.2)*0.001 would leave the last bit, and show it."""
+    table = LookupTable("loads", "use", {"q_L": "kPa"}, {"stack room": {"q_L": "7.2"}}, "made up")
+    sheet = Sheet("B1")
+    with sheet.part("loads", "Loads"):
+        sheet.lookup("q_L", table, "stack room", title="live load")
+        sheet.given("q_g", "7.2 kPa", "load given")
+        sheet.line("q_r = q_L - q_g", unit="kPa", title="What remains")
+    assert recompute(Record.from_text(sheet.close().to_text())) == []

@@ -115,7 +115,10 @@ def _value(entry: Mapping[str, Any], values: Mapping[str, float]) -> float:
     if kind == GIVEN:
         return read_quantity(entry["symbol"], entry["typed"], entry["unit"]).value
     if kind == LOOKUP:
-        return float(entry["printed"]["result"]) * internal_factor(entry["printed"]["unit"])
+        # Read as the sheet read it: the last bit of 7.2 kPa would else grow where values balance.
+        printed = entry["printed"]
+        text = f"{printed['result']} {printed['unit']}"
+        return read_quantity(entry["symbol"], text, printed["unit"]).value
     if kind == LINE:
         _, tree = parse_line(entry["formula"])
         return _evaluate(tree, entry["args"], values)
