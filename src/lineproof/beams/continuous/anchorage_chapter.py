@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
-from lineproof.beams.continuous.anchorage_record import Writers, shear_as_given
+from lineproof.beams.continuous.anchorage_record import Writers, plain
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.detailing_data import ShearStretch
 from lineproof.beams.continuous.detailing_record import record_detailing
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
@@ -28,7 +29,21 @@ def record_anchorage(design: Design) -> None:
     def forces(steps: Steps, demand: Demand, near: End, x: Entry | None = None) -> None:
         record_forces(steps, model, demand, near, x=x)
 
-    writers = Writers(model.sheet, design.designed, span, forces, shear_as_given)
+    writers = Writers(model.sheet, design.designed, span, forces, _record_shear)
     coverage = record_detailing(writers, design.runs)
-    if not coverage.holds and model.inputs.bar_runs is None:
+    inputs = model.inputs
+    given = inputs.bar_runs is not None or any((*inputs.bottom_bars, *inputs.top_bars))
+    if not coverage.holds and not given:  # bars given fail their checks
         raise UserError([f"bars: {gap}" for gap in coverage.gaps])
+
+
+def _record_shear(steps: Steps, stretch: ShearStretch) -> None:
+    """Record what the stirrups of the shear chapter resist over a stretch, rounded down."""
+    sheet = steps.sheet
+    place = f"{stretch.start / 1000:.2f} to {stretch.end / 1000:.2f} m from support 1"
+    source = f"shear, smallest of all load cases, {place}"
+    steps.bind(
+        V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source=source),
+        V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source=source),
+        theta=sheet.given("theta", plain(stretch.theta, "deg"), source=source),
+    )

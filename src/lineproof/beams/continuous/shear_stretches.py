@@ -6,6 +6,7 @@ reaches there. Two lapped bars count as one, which changes over at the middle of
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
@@ -35,6 +36,8 @@ from lineproof.beams.continuous.stirrups_choice import Choice
 from lineproof.beams.continuous.torsion_inputs import span_torsion
 
 _SHORT = 1e-6
+PRINTED_FORCE, PRINTED_ANGLE, PRINTED_PART = 100.0, 0.1, 0.01
+"""Steps to which resistances [N], angles [deg] and parts developed are rounded down."""
 
 
 def basis_of(model: Model) -> ShearBasis:
@@ -119,7 +122,7 @@ def _share(bars: Standing, places: Sequence[float]) -> Share:
             (bars.run.end - x, bars.rise_end, bars.lap_end),
         )
         for length, rise, lap in sides:
-            part = min(max(length / rise, 0.0), 1.0)
+            part = _down(min(max(length / rise, 0.0), 1.0), PRINTED_PART)
             if lap:
                 part = 1.0 if length >= rise / 2 - _SHORT else 0.0
             if part < found.part:
@@ -212,6 +215,11 @@ def needed_top(model: Model, designed: Designed, support: int) -> float | None:
     return max(areas, default=0.0) or None
 
 
+def _down(value: float, step: float) -> float:
+    """Return a resistance or an angle rounded down to what is printed of it."""
+    return math.floor(float(value) / step * (1 + 1e-12)) * step
+
+
 def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ...]:
     """Return the resistance of the stirrups along the beam: the weakest of all cases at a place."""
     made = []
@@ -226,8 +234,9 @@ def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ..
             if end - start > _SHORT:
                 made.append(
                     ShearStretch(
-                        start, end, float(V_r[:, both].min()), float(V_s[:, both].min()),
-                        float(v["theta"][:, both].min()),
+                        start, end, _down(V_r[:, both].min(), PRINTED_FORCE),
+                        _down(V_s[:, both].min(), PRINTED_FORCE),
+                        _down(v["theta"][:, both].min(), PRINTED_ANGLE),
                     )
                 )  # fmt: skip
     return tuple(made)

@@ -22,9 +22,9 @@ from lineproof.record.printing import in_unit, utilisation
 from lineproof.standards.a23_3 import crack_control, flexure, minimum, shear
 
 FLEXURE = ["Place", "Load case", "M_f, kN.m", "A_sr, mm2", "Bars", "A_s, mm2", "M_r, kN.m", "Ratio"]
-FLEXURE_WIDTHS = (22.0, 40.0, 15.0, 16.0, 34.0, 15.0, 15.0, 13.0)
+FLEXURE_WIDTHS = (24.0, 44.0, 14.0, 14.0, 36.0, 14.0, 14.0, 0.0)
 SHEAR = ["Place", "Load case", "Stirrups", "V_f, kN", "V_c, kN", "V_s, kN", "V_r, kN", "Ratio"]
-SHEAR_WIDTHS = (34.0, 40.0, 24.0, 15.0, 15.0, 15.0, 15.0, 13.0)
+SHEAR_WIDTHS = (26.0, 46.0, 24.0, 14.0, 14.0, 14.0, 14.0, 0.0)
 SERVICE = ["Place", "Check", "Demand", "Limit", "Ratio"]
 PAIR = 2
 SERVICE_WIDTHS = (40.0, 62.0, 24.0, 24.0, 14.0)
@@ -36,6 +36,14 @@ class Row:
 
     cells: tuple[str, ...]
     entry: Entry | None
+
+
+def short_case(case: object) -> str:
+    """Return a load case as a narrow column shows it: ``1.25D + 1.5L, L on 1, 3``."""
+    text = str(case)
+    for words in ("live load on spans ", "live load on span "):
+        text = text.replace(words, "L on ")
+    return text
 
 
 def printed(value: float, unit: str, digits: int = 3) -> str:
@@ -69,7 +77,7 @@ def flexure_rows(model: Model) -> Iterator[Row]:
 
 def _sag(model: Model, span: int) -> Row:
     entries = model.sheet.entries_of(f"sag-{span}")
-    case = str(model.forces.sag(span).case)
+    case = short_case(model.forces.sag(span).case)
     return _moment_row(f"span {span}", case, entries, entries, _bars(entries))
 
 
@@ -88,9 +96,10 @@ def _hog(model: Model, face: Face) -> Row:
     if flexure.STRENGTH.key not in entries:
         return Row((name, "no tension at the top", "", "", "", "", "", ""), None)
     if nominally_simple(model, face):
-        case = f"restraint: {model.forces.cases[worst_case(model, face.span)[1]]}"
+        worst_load = model.forces.cases[worst_case(model, face.span)[1]]
+        case = f"restraint: {short_case(worst_load)}"
     else:
-        case = str(model.forces.hog(face.support, face.side).case)
+        case = short_case(model.forces.hog(face.support, face.side).case)
     worst = entries if "A_s" in entries else _worst_face(model, face)
     return _moment_row(name, case, entries, worst, _bars(worst))
 
@@ -131,7 +140,7 @@ def shear_rows(design: Design) -> Iterator[Row]:
         legs = "" if basis.legs == PAIR else f"{basis.legs} legs "
         spaced = f"{legs}{basis.stirrup} at {section.spacing:g}" if not section.plain else "none"
         ratio = ratio_text(check) if check is not None else "FAILS"
-        yield Row((place, str(section.demand.case), spaced, *values, ratio), check)
+        yield Row((place, short_case(section.demand.case), spaced, *values, ratio), check)
 
 
 _SERVICE_CHECKS = (crack_control.CRACKS.key, minimum.BY_AREA.key, minimum.BY_CRACKING.key)
@@ -177,8 +186,8 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
     Of forces that were brought in, the largest and smallest reaction of their cases.
     """
     if model.imported is not None:
-        columns, cells = imported_reactions(model)
-        return columns, [Row(tuple(row), None) for row in cells]
+        columns, found = imported_reactions(model)
+        return columns, [Row(tuple(row), None) for row in found]
     entries = model.sheet.entries_of(ANALYSIS)
     kinds = [
         kind for kind in KINDS if any(f"R_{j}{code(kind)}" in entries for j in _supports(model))
