@@ -147,7 +147,7 @@ def test_stirrups_too_close_ask_for_thicker_ones() -> None:
         ({"method": "simplified", "f_y": 500.0}, "'simplified' holds up to bars of 400 MPa"),
         ({"method": "simplified", "f_c": 65.0}, "'simplified' holds up to concrete of 60 MPa"),
         ({"method": "exact"}, "'exact'; write one of general, simplified"),
-        ({"legs": 1}, "legs: 1 given; write 2 or more"),
+        ({"legs": 1}, "stirrup_legs: 1 given; write 2 or more"),
     ],
 )
 def test_a_method_that_does_not_hold_is_refused(changes: dict[str, Any], said: str) -> None:

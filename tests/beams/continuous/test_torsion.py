@@ -222,8 +222,8 @@ def test_open_stirrups_are_refused_where_torsion_counts() -> None:
     case = edge_beam()
     with pytest.raises(UserError) as caught:
         choose_stirrups(case.outline, case.forces, BASIS, case.spans)
-    assert "stirrups: span 1: its torsion of" in caught.value.faults[0]
-    assert "but the stirrups are open; write closed stirrups" in caught.value.faults[0]
+    assert "closed_stirrups: span 1: its torsion of" in caught.value.faults[0]
+    assert "but the stirrups are open; write closed_stirrups = True" in caught.value.faults[0]
     with pytest.raises(UserError, match="write 2 legs, closed"):
         choose_stirrups(case.outline, case.forces, replace(CLOSED, legs=4), case.spans)
 

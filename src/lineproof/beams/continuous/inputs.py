@@ -52,6 +52,10 @@ SHARE = Range("", 0, 1, zero=True)
 LEAST_LEGS, MOST_LEGS = 2, 6
 DEEPEST = 2.0
 """Clear span over depth below which a beam is deep (10.7)."""
+SHORTEST = 1.0
+"""Clear length over depth below which a cantilever is a bracket: half of a deep beam."""
+SIMPLIFIED_UP_TO = 400.0, 60.0
+"""Largest f_y and f_c of the simplified method [MPa] (11.3.6.3)."""
 STORED = ("storage area", "equipment room", "library stack room")
 """Uses whose companion live load is larger (NBC 4.1.3.2)."""
 
@@ -165,6 +169,10 @@ def read_inputs(
     fields["forces_file"] = take("forces_csv", read_forces_file, given, fields)
     check_density(fields, given, reader.faults)
     _check_slab(fields, given, reader.faults)
+    _check_bars_given(fields, reader.faults)
+    _check_method(fields, reader.faults)
+    if spans:
+        _check_torques(fields, reader.faults)
     if not reader.faults.faults:
         _check_proportions(fields, reader.faults)
     reader.faults.raise_if_any()
@@ -262,6 +270,55 @@ def _check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Fau
         )
 
 
+def _check_bars_given(fields: Mapping[str, Any], faults: FaultList) -> None:
+    """Refuse bars given twice, once by section and once along the beam."""
+    if fields["bar_runs"] is None:
+        return
+    for name, each in (("bottom_bars", "span"), ("top_bars", "support")):
+        rows = fields.get(name) or ()
+        given = next(((n, bars) for n, bars in enumerate(rows, start=1) if bars is not None), None)
+        if given is not None:
+            shown = " / ".join(str(layer) for layer in given[1])
+            faults.add(
+                f"{name}: {shown} at {each} {given[0]} is given beside bar_runs, which hold all "
+                f"bars; write {name} = None, or bar_runs = None"
+            )
+
+
+def _check_method(fields: Mapping[str, Any], faults: FaultList) -> None:
+    """Refuse the simplified method of shear where it does not hold."""
+    if fields["shear_method"] != "simplified" or None in (fields["grade"], fields["f_c"]):
+        return
+    f_y, f_c = GRADES.number(fields["grade"], "f_y"), fields["f_c"].value
+    most_steel, most_concrete = SIMPLIFIED_UP_TO
+    if f_y > most_steel:
+        faults.add(
+            f"shear_method: 'simplified' holds up to bars of {most_steel:g} MPa, but grade "
+            f"{fields['grade']!r} has {f_y:g} MPa; write 'general'"
+        )
+    if f_c > most_concrete:
+        faults.add(
+            f"shear_method: 'simplified' holds up to concrete of {most_concrete:g} MPa, but f_c "
+            f"is {fields['f_c'].text}; write 'general'"
+        )
+
+
+def _check_torques(fields: Mapping[str, Any], faults: FaultList) -> None:
+    """Refuse torques of load types that the beam does not carry."""
+    if fields["use"] is None or fields.get("loads") is None:
+        return
+    live = "L_st" if fields["use"] in STORED else "L"
+    there = {"D", live} | {load.kind for load in fields["loads"]}
+    there |= {"S"} if fields["snow"] is not None else set()
+    for kind in fields["torques"]:
+        if kind not in there:
+            faults.add(
+                f"torques: a torque by {kind}, but the beam has no load of that type (use "
+                f"{fields['use']!r} gives {live}); write one of {', '.join(sorted(there))}, or the "
+                "load that turns the beam as a load as well"
+            )
+
+
 def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
     """Refuse beams that cannot stand, slabs thicker than the beam, and deep beams."""
     try:
@@ -282,8 +339,9 @@ def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
                 "thinner slab or a deeper beam"
             )
         clear = length.value - halves[number - 1] - halves[number]
-        if clear > 0 and "free" not in (supports[number - 1].kind, supports[number].kind):
-            _check_depth(number, clear, depth, faults)
+        cantilever = "free" in (supports[number - 1].kind, supports[number].kind)
+        if clear > 0:
+            _check_depth(number, clear, depth, faults, cantilever=cantilever)
 
 
 def _stand_in(fields: Mapping[str, Any]) -> Beam:
@@ -298,12 +356,16 @@ def _stand_in(fields: Mapping[str, Any]) -> Beam:
     )
 
 
-def _check_depth(number: int, clear: float, depth: Typed, faults: FaultList) -> None:
-    if clear < DEEPEST * depth.value:
-        faults.add(
-            f"span {number}: its clear length of {clear / 1000:g} m is less than twice h of "
-            f"{depth.text}: a deep beam is outside the method; use strut-and-tie (A23.3, 10.7)"
-        )
+def _check_depth(
+    number: int, clear: float, depth: Typed, faults: FaultList, *, cantilever: bool
+) -> None:
+    if clear >= (SHORTEST if cantilever else DEEPEST) * depth.value:
+        return
+    limit, what = ("h", "so short a cantilever") if cantilever else ("twice h", "a deep beam")
+    faults.add(
+        f"span {number}: its clear length of {clear / 1000:g} m is less than {limit} of "
+        f"{depth.text}: {what} is outside the method; use strut-and-tie (A23.3, 10.7)"
+    )
 
 
 QuantityOrList = QuantityInput | list[QuantityInput]

@@ -210,11 +210,11 @@ def _open_with_torsion(state: SpanState) -> Iterator[str]:
     where += "quarter of that which cracks the section"
     if not state.basis.closed:
         yield (
-            f"stirrups: {where}, but the stirrups are open; write closed stirrups, with hooks of "
-            "135 degrees"
+            f"closed_stirrups: {where}, but the stirrups are open; write closed_stirrups = True: "
+            "closed, with hooks of 135 degrees"
         )
     if state.basis.legs != 2:  # noqa: PLR2004 - the legs that go around the section
-        yield f"legs: {where}, but {state.basis.legs} legs are given; write 2 legs, closed"
+        yield f"stirrup_legs: {where}, but {state.basis.legs} are given; write 2 legs, closed"
 
 
 def _hopeless(state: SpanState) -> Iterator[str]:

@@ -161,7 +161,7 @@ def check_basis(basis: ShearBasis) -> None:
                 f"{basis.f_c:g} MPa; write 'general'"
             )
     if basis.legs < 2:  # noqa: PLR2004 - a stirrup goes around the section
-        faults.add(f"legs: {basis.legs} given; write 2 or more")
+        faults.add(f"stirrup_legs: {basis.legs} given; write 2 or more")
     faults.raise_if_any()
 
 

@@ -87,7 +87,7 @@ def torque_per_length(torsion: SpanTorsion, forces: Forces, span: int) -> Floats
     for kind, torque in torsion.torques.items():
         if (kind, span) not in rows:
             raise UserError(
-                f"torsion: span {span} has a torque by {kind}, but no load of that type; write "
+                f"torques: span {span} has a torque by {kind}, but no load of that type; write "
                 "the load that turns the beam as a load as well, or leave the torque out"
             )
         factors[rows.index((kind, span))] = torque

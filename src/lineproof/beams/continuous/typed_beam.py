@@ -216,7 +216,8 @@ def _read_load(name: str, given: object, lengths: Sequence[Typed]) -> TypedLoad:
             f"{name}: type {echo(given.get('type'))}; write one of {', '.join(GRAVITY_TYPES)}"
         )
     spans = _try(faults, _span_numbers, name, given.get("span"), len(lengths)) or ()
-    faults.raise_if_any()
+    if len(forms) != 1:
+        faults.raise_if_any()
     form = forms[0]
     size = _try(faults, read_in_range, f"{name}, {form}", given[form], _FORMS[form])
     width = _part(faults, name, given, "width", LOADED_WIDTH, needed=form == "area")
