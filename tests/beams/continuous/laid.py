@@ -134,7 +134,7 @@ def designed_sections(
         if M <= 1e6:
             top.append(TopBars())
             continue
-        h = outline.depths[min(j, len(outline.depths)) - 1]
+        h = min(outline.depths[max(j - 2, 0) : j])
         top.append(TopBars(layers_for(M, h, outline.b_w, most, size)))
     shear = []
     for k in range(1, len(outline.lengths) + 1):
@@ -171,6 +171,10 @@ def random_beams(draw: st.DrawFn) -> Designed:
         shape=draw(st.sampled_from(["T", "L", "rectangular"])),
         breadths={1: 550.0, spans + 1: 550.0},
     )  # fmt: skip
+    if draw(st.integers(0, 3)) == 0:
+        outline = bare.outline
+        depths = tuple(draw(st.sampled_from([600.0, 700.0])) for _ in range(spans))
+        bare = replace(bare, basis=replace(bare.basis, outline=replace(outline, depths=depths)))
     size, holders = draw(
         st.sampled_from([("20M", "15M"), ("25M", "15M"), ("25M", "20M"), ("20M", "20M")])
     )

@@ -17,7 +17,7 @@ from lineproof.beams.continuous.anchorage import (
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import lap_pairs
+from lineproof.beams.continuous.resistance import level_pairs
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.quantity import Typed
@@ -65,6 +65,7 @@ class Writers:
 
     ``span`` gives the entries of a span (h, l, l_n, b_f, b_o); ``forces`` records M_f and V_f of
     a demand and binds them; ``shear`` records V_r, V_s and theta of a stretch and binds them.
+    ``torsion`` records the torsion of a demand at the face of a support and binds T_f, p_h, A_o.
     """
 
     sheet: Sheet
@@ -74,6 +75,7 @@ class Writers:
     shear: Callable[[Steps, ShearStretch], None] = shear_as_given
     sizes: Mapping[str, Entry] = field(default_factory=dict)
     """Diameters and areas that are recorded already, ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
+    torsion: Callable[[Steps, Demand, End], None] | None = None
 
 
 Lengths = Mapping[Bar, Mapping[str, Entry]]
@@ -234,7 +236,10 @@ def length_entry(writers: Writers, lengths: Lengths, run: BarRun) -> Entry:
 def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
     """Record every kind of lap in a part: size, length against what is laid, room for concrete."""
     designed, kept = writers.designed, tuple(runs)
-    pairs = [(kept[i], kept[j]) for i, j in sorted(lap_pairs(kept), key=lambda p: kept[p[1]].start)]
+    pairs = [
+        (kept[i], kept[j])
+        for i, j in sorted(level_pairs(designed, kept), key=lambda p: kept[p[1]].start)
+    ]
     seen: dict[tuple[Bar, float], int] = {}
     for first, second in pairs:
         thin = min(first, second, key=lambda run: run.diameter)

@@ -181,18 +181,15 @@ def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) 
 
 
 def _last_needed(needed: Whole, half: int) -> int | None:
-    """Return the last station that needs the bars of this support.
+    """Return the last station that needs the bars of this support, without a break from it on.
 
-    The last one in its half of the span, or of the stations without a break from the support on.
+    None where the first station that needs them lies in the other half of the span: it is for
+    the bars of the other support.
     """
-    if not len(needed):
+    if not len(needed) or needed[0] >= half:
         return None
     breaks = np.flatnonzero(np.diff(needed) > 1)
-    unbroken = needed[breaks[0]] if len(breaks) else needed[-1]
-    own = needed[needed < half]
-    if not len(own):
-        return None
-    return int(max(own[-1], unbroken)) if needed[0] < half else int(own[-1])
+    return int(needed[breaks[0]] if len(breaks) else needed[-1])
 
 
 def far_face(designed: Designed, span: int, near: End) -> float:
@@ -328,4 +325,4 @@ def worst_between(
     x = np.concatenate([kept, np.array(inside)])
     side = demand.side(face).between(demand.x, x)
     provided = provide(designed, standing, face, x, np.full(len(x), span))
-    return float(ratios(side, provided, yield_force(designed)).max())
+    return float(ratios(side, provided, yield_force(designed), torsion=True).max())

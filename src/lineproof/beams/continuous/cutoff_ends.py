@@ -11,7 +11,7 @@ from lineproof.beams.continuous.cutoff import distance, far_face, half_of, local
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import alike, lap_pairs, lapped
+from lineproof.beams.continuous.resistance import alike, lap_pairs, lapped, level_pairs
 from lineproof.beams.continuous.resistance_demand import NOTHING
 
 Runs = tuple[BarRun, ...]
@@ -53,10 +53,10 @@ class SideOf:
         return self.cuts[index + 1].t if index + 1 < len(self.cuts) else self.t_kept
 
 
-def whole(runs: Iterable[BarRun], run: BarRun, towards: End) -> BarRun:
+def whole(designed: Designed, runs: Iterable[BarRun], run: BarRun, towards: End) -> BarRun:
     """Return the last of the like bars that a run is lapped with, one after the other."""
     kept = tuple(runs)
-    pairs = lap_pairs(kept, lapped)
+    pairs = level_pairs(designed, kept, lapped)
     after = dict(pairs) if towards == "right" else {j: i for i, j in pairs}
     index = next((i for i, other in enumerate(kept) if other is run), -1)
     while index in after:
@@ -93,7 +93,10 @@ def _beside(first: BarRun, second: BarRun, i: int, j: int, x: float) -> int:
 def bottom_side(designed: Designed, runs: Runs, span: int, near: End) -> SideOf:
     """Return how the bottom bars of a span end towards a support."""
     there = at_section(runs, "bottom", sag_at(designed, span))
-    tips = [(distance(designed, span, near, tip(whole(runs, r, near), near)), r) for r in there]
+    tips = [
+        (distance(designed, span, near, tip(whole(designed, runs, r, near), near)), r)
+        for r in there
+    ]
     half = half_of(designed, span, near)
     inside = [(t, r) for t, r in tips if t <= half]
     cut = sorted({t for t, _ in tips if t > half}, reverse=True)
@@ -109,14 +112,38 @@ def top_side(designed: Designed, runs: Runs, support: int, side: End) -> SideOf:
     span, near = (support - 1, other(side)) if side == "left" else (support, other(side))
     axis = designed.outline.axes[support - 1]
     there = at_section(runs, "top", _inside(designed, support, axis))
-    tips = [(distance(designed, span, near, tip(whole(runs, r, side), side)), r) for r in there]
+    tips = [
+        (distance(designed, span, near, tip(whole(designed, runs, r, side), side)), r)
+        for r in there
+    ]
     far = far_face(designed, span, near)
     most = min(max((t for t, _ in tips), default=0.0), far)
-    ends = sorted({t for t, _ in tips if t < most})
+    others = [run for run in runs if run.face == "top" and not _one_with(run, there)]
+    met = {t for t, _ in tips if t < most and _met(designed, others, span, near, t)}
+    ends = sorted({t for t, _ in tips if t < most} - met)
     endings = tuple(Ending(t, tuple(r for s, r in tips if s == t)) for t in ends)
-    kept = tuple(r for t, r in tips if t >= most)
+    kept = tuple(r for t, r in tips if t >= most or t in met)
     t_kept = min((t for t, _ in tips if t >= most), default=0.0)
     return SideOf("top", span, near, there, endings, kept, t_kept)
+
+
+def _one_with(run: BarRun, there: Runs) -> bool:
+    """Tell whether a run is one of some bars or lapped with them, like bars in line."""
+    return any(run is r or lapped(run, r) or lapped(r, run) for r in there)
+
+
+def _met(designed: Designed, others: Iterable[BarRun], span: int, near: End, t: float) -> bool:
+    """Tell whether bars that end past midspan meet others there, of the next support.
+
+    Such bars are not cut: those of both supports carry the span together, as the coverage shows.
+    """
+    length = designed.outline.lengths[span - 1]
+    far = other(near)
+    return t > length / 2 and any(
+        distance(designed, span, near, tip(run, near)) < t
+        and distance(designed, span, near, tip(run, far)) >= length
+        for run in others
+    )
 
 
 def _inside(designed: Designed, support: int, axis: float) -> float:

@@ -7,10 +7,17 @@ from collections.abc import Mapping
 import numpy as np
 
 from lineproof.beams.bars import BarLayers, bars_text
-from lineproof.beams.continuous.anchorage import available, bar_of, develop
+from lineproof.beams.continuous.anchorage import bar_of, develop
 from lineproof.beams.continuous.anchorage_record import Writers, plain, record_hook
-from lineproof.beams.continuous.cutoff import Point, half_of, local, no_further_need, support_of
-from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes
+from lineproof.beams.continuous.cutoff import (
+    Point,
+    distance,
+    half_of,
+    local,
+    no_further_need,
+    support_of,
+)
+from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes, tip
 from lineproof.beams.continuous.cutoff_record import Site, record_extension
 from lineproof.beams.continuous.cutoff_sets import (
     Group,
@@ -24,13 +31,12 @@ from lineproof.beams.continuous.cutoff_sets import (
 from lineproof.beams.continuous.detailing_bottom import support_shear
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance_demand import stretch_at
+from lineproof.beams.continuous.resistance_demand import end_tensions, end_torsion, stretch_at
 from lineproof.beams.steps import Steps
-from lineproof.errors import UserError
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
-from lineproof.standards.a23_3 import development, hooks, shear, shear_bars
+from lineproof.standards.a23_3 import development, hooks, shear, shear_bars, torsion
 
 Hooks = Mapping[tuple[int, str], Entry]
 """Recorded development lengths of hooks by support number and bar size."""
@@ -251,15 +257,17 @@ def record_end_bottom(site: Site, hooked: Hooks) -> None:
             steps.bind(F_le=sheet.given("F_le", force, source="shear"))
         else:
             _record_end_force(site, steps)
-        l_av = available(designed, support)
         rows = []
+        half = half_of(designed, side.span, side.near)
         for run in side.kept:
             needed = hooked[support, run.size] if _hook(run, side.near) else site.bar(run)["l_d"]
             (group,) = grouped(writers, (run,))
+            l_av = half - distance(designed, side.span, side.near, tip(run, side.near))
             rows.append((group, l_av, needed))
-        if not rows:
-            raise UserError(f"bars: no bottom bars reach support {support}; write bars that do")
-        record_developed(steps, rows)
+        if rows:
+            record_developed(steps, rows)
+        else:
+            steps.bind(A_sd=sheet.given("A_sd", "0 mm2", source="no bars reach the face"))
         steps.check(shear_bars.END_SUPPORT_HOLDS)
 
 
@@ -267,8 +275,8 @@ def _record_end_force(site: Site, steps: Steps) -> None:
     side, designed = site.side, site.writers.designed
     t = half_of(designed, side.span, side.near)
     x = local(designed, side.span, side.near, t)
-    _, V = designed.forces.pairs(side.span, x, "right" if side.near == "left" else "left")
-    row = int(np.abs(V).argmax())
+    support = support_of(side.span, side.near)
+    row = int(np.argmax(end_tensions(designed, support)))
     demand = designed.forces.demand(side.span, x, "right" if side.near == "left" else "left", row)
     steps.bind(x_f=site.writers.sheet.given("x_e", plain(t, "mm"), "face of the support"))
     site.writers.forces(steps, demand, side.near, steps.entry("x_f"))
@@ -282,7 +290,12 @@ def _record_end_force(site: Site, steps: Steps) -> None:
             V_s=site.writers.sheet.given("V_s", "0 kN", source="no stirrups counted"),
             theta=site.writers.sheet.given("theta", plain(stretch.theta, "deg"), source="11.3.6.3"),
         )
-    steps.line(shear_bars.END_SUPPORT)
+    turned = end_torsion(designed, support)
+    if turned is None or turned.T_f[row] <= 0 or site.writers.torsion is None:
+        steps.line(shear_bars.END_SUPPORT)
+        return
+    site.writers.torsion(steps, demand, side.near)
+    steps.lines(torsion.SHEAR_IN_BARS, torsion.END_SUPPORT)
 
 
 def record_end_top(site: Site) -> None:

@@ -139,19 +139,23 @@ def _ended(
 
 
 def _anchored(designed: Designed, span: int, near: End, groups: Sequence[BarRun]) -> Anchored:
-    """Return how the bars end: as few as hold, straight before hooked."""
+    """Return how the bars end: as few as hold, straight before hooked.
+
+    Where torsion counts all of them run in (common practice for edge beams).
+    """
     support = support_of(span, near)
     if not designed.held(support):
         return Anchored(len(groups))
+    first = len(groups) - 1 if span in designed.torsion else 0
+    numbers = range(first, len(groups))
     if not designed.exterior(support):
-        numbers = range(len(groups))
         return next(
             (Anchored(n) for n in numbers if _share(designed, support, groups, n)),
             Anchored(len(groups) - 1),
         )
     hooks: tuple[Hook, ...] = ("", "90") if has_hooks(designed) else ("",)
     for hook in hooks:
-        for n in range(len(groups)):
+        for n in numbers:
             if _share(designed, support, groups, n) and _held(
                 designed, span, near, groups, n, hook
             ):
@@ -279,10 +283,17 @@ def _cut(
 
 
 def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
-    """Return the corner bars of all spans: like bars run through supports, others are lapped."""
+    """Return the corner bars of all spans: like bars run through, others are lapped.
+
+    Where the depth changes they stand at different heights: each ends by itself.
+    """
     made = [corners[0]]
     for (span, before), (_, after) in pairwise(enumerate(corners, start=1)):
         axis = designed.outline.axes[span]
+        if designed.outline.depths[span - 1] != designed.outline.depths[span]:
+            made[-1] = _into_step(designed, span, "right", made[-1])
+            made.append(_into_step(designed, span + 1, "left", after))
+            continue
         if before.size == after.size:
             made[-1] = replace(
                 made[-1], end=after.end, hook_end=after.hook_end, serves=_both(made[-1], after)
@@ -293,6 +304,21 @@ def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
         made[-1] = replace(made[-1], end=axis + half)
         made.append(replace(after, start=axis - half))
     return made
+
+
+def _into_step(designed: Designed, span: int, near: End, run: BarRun) -> BarRun:
+    """Return corner bars ended at a support where the soffit steps.
+
+    Those of the deeper span reach the far side of the support; the others run on into the deeper
+    concrete until they are developed at their face.
+    """
+    half = half_of(designed, span, near)
+    beside = span - 1 if near == "left" else span + 1
+    t = designed.end_cover - half
+    if designed.outline.depths[span - 1] < designed.outline.depths[beside - 1]:
+        l_d = develop(designed.basis, bar_of(designed, run)).l_d
+        t = min(t, floor50(half - l_d))
+    return _ended(designed, span, near, run, t)
 
 
 def _both(before: BarRun, after: BarRun) -> str:

@@ -10,6 +10,7 @@ from dataclasses import dataclass, field
 from functools import cached_property
 from typing import Literal
 
+from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.continuous.forces import Demand, Forces
 from lineproof.beams.continuous.layout import BeamOutline
@@ -81,6 +82,23 @@ class ShearStretch:
     theta: float = THETA
 
 
+@dataclass(frozen=True, eq=False, slots=True)
+class TorsionForces:
+    """What torsion asks of the bars of a span in which it counts.
+
+    ``bottom`` and ``top`` are the forces [N] that the bars of each face need at the stations ``x``
+    from the left axis, moment and shear included (11.3.10.6). ``ends`` holds the torsion designed
+    for at both faces, case by case [N.mm], 0 where it does not count.
+    """
+
+    x: Floats
+    bottom: Floats
+    top: Floats
+    ends: tuple[Floats, Floats]
+    p_h: float
+    A_o: float
+
+
 @dataclass(frozen=True, eq=False)
 class Basis:
     """What a development length depends on besides the bar itself."""
@@ -99,7 +117,8 @@ class Designed:
     the bars, and no bar is cut in a tension zone. ``breadths`` gives the width of a column across
     the beam by support number, where it is known. ``end_cover`` is the concrete outside of the
     bars at the ends of the beam, ``stock`` the longest bar. ``end_forces`` [N] of 11.3.9.5 by
-    support number replace those found here.
+    support number replace those found here. ``torsion`` is known, by span, where torsion counts:
+    there the bottom bars run through.
     """
 
     basis: Basis
@@ -111,6 +130,7 @@ class Designed:
     end_cover: float = END_COVER
     stock: float = STOCK
     end_forces: Mapping[int, float] = field(default_factory=dict)
+    torsion: Mapping[int, TorsionForces] = field(default_factory=dict)
 
     @property
     def outline(self) -> BeamOutline:

@@ -35,6 +35,7 @@ from lineproof.beams.continuous.cutoff import (
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
+from lineproof.beams.continuous.detailing_meeting import Reach, met
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
@@ -49,19 +50,6 @@ LEAST_STEP = 300.0
 """Bars whose ends lie closer than this have one length."""
 SHARE_PAST = 3.0
 """One bar in so many passes the point of inflection (12.12.2)."""
-
-
-@dataclass(frozen=True, slots=True)
-class Reach:
-    """How far long and short bars reach into a span, from the axis of their support.
-
-    ``through`` says that the long bars meet those of the next support: there is no point of
-    inflection between.
-    """
-
-    long: float
-    short: float
-    through: bool = False
 
 
 def groups_of(designed: Designed, support: int) -> tuple[BarRun, ...]:
@@ -97,6 +85,7 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
     spans = range(1, len(designed.outline.lengths) + 1)
     for span in spans:
         _fill(frame, span, reaches)
+        _meet(designed, span, reaches)
     rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
     corners = {support: row[0] for support, row in rows.items() if row}
     others = [run for row in rows.values() for run in row[1:]]
@@ -120,6 +109,17 @@ def _fill(frame: Frame, span: int, reaches: dict[int, dict[End, Reach]]) -> None
             return
         for s, e in meeting:
             reaches[s][e] = _longer(reaches[s][e], length)
+
+
+def _meet(designed: Designed, span: int, reaches: dict[int, dict[End, Reach]]) -> None:
+    """Lengthen like bars of both supports that overlap by less than a lap."""
+    left, right = reaches[span].get("right"), reaches[span + 1].get("left")
+    if left is None or right is None:
+        return
+    groups = groups_of(designed, span), groups_of(designed, span + 1)
+    bars = [[(run, i < long_of(row)) for i, run in enumerate(row)][1:] for row in groups]
+    found = met(designed, span, (left, right), (bars[0], bars[1]))
+    reaches[span]["right"], reaches[span + 1]["left"] = found
 
 
 def _longer(found: Reach, length: float) -> Reach:
@@ -238,7 +238,17 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
         whole = short >= long
         long = _meeting(work)
         short = long if whole else short
+    long = min(long, _furthest(designed, span, near))
     return Reach(long, min(short, long), through)
+
+
+def _furthest(designed: Designed, span: int, near: End) -> float:
+    """Return how far bars can reach: past the far axis, at the end of the beam into the support."""
+    length = designed.outline.lengths[span - 1]
+    far = support_of(span, other(near))
+    if far not in (1, len(designed.outline.supports)):
+        return length * 2
+    return length + designed.outline.supports[far - 1].half - designed.end_cover
 
 
 def _lengthened(work: Work, long: float, short: float, most: float) -> tuple[float, float, bool]:

@@ -100,6 +100,24 @@ def lap_pairs(
     return tuple(made)
 
 
+def level_pairs(
+    designed: Designed,
+    runs: Sequence[BarRun],
+    test: Callable[[BarRun, BarRun], bool] = in_line,
+) -> tuple[tuple[int, int], ...]:
+    """Return the laps of :func:`lap_pairs` but those of bottom bars where the soffit steps."""
+    return tuple(
+        (i, j)
+        for i, j in lap_pairs(runs, test)
+        if runs[i].face == "top" or _depth_at(designed, runs[i]) == _depth_at(designed, runs[j])
+    )
+
+
+def _depth_at(designed: Designed, run: BarRun) -> float:
+    """Return the depth of the span that the middle of a run lies in."""
+    return designed.outline.depths[span_at(designed.outline, (run.start + run.end) / 2) - 1]
+
+
 def distance_of(designed: Designed, run: BarRun) -> float:
     """Return the distance of the centres of a run's bars from their face."""
     c_c = designed.outline.cover
@@ -128,7 +146,7 @@ def first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
 def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
     """Return the runs with the lengths over which their stress rises."""
     kept = [run for run in runs if run.place != "side face"]
-    pairs = lap_pairs(kept, lapped)
+    pairs = level_pairs(designed, kept, lapped)
     ends, starts = ({pair[side] for pair in pairs} for side in (0, 1))
     made = []
     for index, run in enumerate(kept):

@@ -101,10 +101,13 @@ def _ratio(demand: float, provided: float) -> float:
     return demand / provided if provided > 0 else float("inf")
 
 
-def ratios(side: Side, provided: Provided, force: float) -> Floats:
-    """Return demand over resistance at every station; ``force`` is that of 1 mm2 at yield."""
-    F_r = provided.A * force
-    made: Floats = np.maximum(_ratios(side.M, provided.M_r), _ratios(side.F, F_r))
+def ratios(side: Side, provided: Provided, force: float, *, torsion: bool = False) -> Floats:
+    """Return demand over resistance at every station; ``force`` is that of 1 mm2 at yield.
+
+    With ``torsion`` its force counts as well; it has checks of its own at the sections of shear.
+    """
+    F_r, F_f = provided.A * force, side.force if torsion else side.F
+    made: Floats = np.maximum(_ratios(side.M, provided.M_r), _ratios(F_f, F_r))
     return made
 
 

@@ -8,7 +8,7 @@ the top bars the largest moment is that of the half of the span, since each end 
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -19,7 +19,7 @@ from lineproof.beams.continuous.detailing_data import THETA, Designed, ShearStre
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.resistance import area_for, section_depth, shear_depth
-from lineproof.standards.a23_3 import shear_bars
+from lineproof.standards.a23_3 import shear_bars, torsion
 
 Whole = NDArray[np.intp]
 Truths = NDArray[np.bool_]
@@ -35,7 +35,8 @@ TIP = 50.0
 class Side:
     """Demand of one face along one span: moment (positive: this face in tension), tension.
 
-    The rows say which load case gives them. ``free`` is the tension before its cap.
+    The rows say which load case gives them. ``free`` is the tension before its cap. ``torsion`` is
+    the force with torsion, where it counts: it has no cap (11.3.10.6).
     """
 
     M: Floats
@@ -43,11 +44,17 @@ class Side:
     free: Floats
     F_row: Whole
     cap: Floats
+    torsion: Floats | None = None
 
     @property
     def F(self) -> Floats:
         """The tension, at most what the largest moment needs alone."""
         return np.clip(np.minimum(self.free, self.cap), 0.0, None)
+
+    @property
+    def force(self) -> Floats:
+        """The tension that bars are laid for: with torsion where it counts."""
+        return self.F if self.torsion is None else np.maximum(self.F, self.torsion)
 
     def crossings(self, x: Floats) -> list[float]:
         """Return the places between the stations x at which the tension reaches its cap."""
@@ -63,7 +70,8 @@ class Side:
         nearest = np.clip(np.searchsorted(at, x), 0, len(at) - 1)
         cap = np.maximum(self.cap[nearest], self.cap[np.maximum(nearest - 1, 0)])
         none = np.zeros(len(x), dtype=np.intp)
-        return Side(M, none, free, none, cap)
+        turned = None if self.torsion is None else np.interp(x, at, self.torsion)
+        return Side(M, none, free, none, cap, turned)
 
 
 @dataclass(frozen=True, eq=False, slots=True)
@@ -136,6 +144,10 @@ def demand_at(designed: Designed, span: int, local: Floats) -> SpanDemand:
     inside = (local < left) | (local > right)
     bottom = _side(M, extra, inside, *_bottom(designed, span))
     top = _top_side(designed, span, local, M, extra, inside)
+    turned = designed.torsion.get(span)
+    if turned is not None:
+        bottom = replace(bottom, torsion=np.interp(at, turned.x, turned.bottom))
+        top = replace(top, torsion=np.interp(at, turned.x, turned.top))
     return SpanDemand(span, local + axis, local, bottom, top)
 
 
@@ -202,12 +214,45 @@ def end_tension(designed: Designed, support: int) -> float:
     """Return the tension of 11.3.9.5 at the inner face of an end support [N], or the one given."""
     if support in designed.end_forces:
         return designed.end_forces[support]
+    return max(end_tensions(designed, support))
+
+
+def end_tensions(designed: Designed, support: int) -> list[float]:
+    """Return the tension of 11.3.9.5 at the inner face of an end support by case [N].
+
+    With torsion (11.3.10.6) in the cases in which it counts there.
+    """
     span = 1 if support == 1 else len(designed.outline.lengths)
     left, right = designed.forces.beam.faces(span)
     x = left if support == 1 else right
     _, V = designed.forces.pairs(span, x, "right" if support == 1 else "left")
     inside = x + (1.0 if support == 1 else -1.0) + designed.outline.axes[span - 1]
     met = stretch_at(designed, inside)
-    return max(
-        value(shear_bars.END_SUPPORT, V_f=abs(float(v)), V_s=met.V_s, theta=met.theta) for v in V
-    )
+    T = end_torsion(designed, support)
+    made = []
+    for row, v in enumerate(V.tolist()):
+        given = {"V_f": abs(v), "V_s": met.V_s, "theta": met.theta}
+        if T is not None and T.T_f[row] > 0:
+            V_le = value(torsion.SHEAR_IN_BARS, T_f=T.T_f[row], p_h=T.p_h, A_o=T.A_o, **given)
+            made.append(value(torsion.END_SUPPORT, V_le=V_le, theta=met.theta))
+        else:
+            made.append(value(shear_bars.END_SUPPORT, **given))
+    return made
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class EndTorsion:
+    """Torsion designed for at the inner face of an end support by case, and the stirrups."""
+
+    T_f: list[float]
+    p_h: float
+    A_o: float
+
+
+def end_torsion(designed: Designed, support: int) -> EndTorsion | None:
+    """Return the torsion at the inner face of an end support; None where none counts."""
+    turned = designed.torsion.get(1 if support == 1 else len(designed.outline.lengths))
+    if turned is None:
+        return None
+    T_f = turned.ends[0 if support == 1 else 1].tolist()
+    return EndTorsion(T_f, turned.p_h, turned.A_o)

@@ -8,6 +8,7 @@ import numpy as np
 
 from lineproof.beams.continuous.anchorage import bar_of
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
+from lineproof.beams.continuous.cutoff import half_of
 from lineproof.beams.continuous.cutoff_ends import Runs
 from lineproof.beams.continuous.cutoff_sets import (
     Group,
@@ -104,13 +105,48 @@ def _record_moment(
     title = (
         f"{face.capitalize()} bars: the station that their moment uses most, span {station.span}"
     )
+    if station.M_r <= 0:
+        _record_nothing(writers, station, title)
+        return
     with writers.sheet.part(f"{COVERAGE}-{face}", title):
         steps = _developed(writers, lengths, hooked, standing, station)
         record_resistance(steps, writers, face)
-        x = writers.sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+        x = _record_place(writers, station, near, t)
         demand = _demand(writers, station, tension=False)
         writers.forces(steps, demand, near, x)
         steps.check(flexure.STRENGTH)
+
+
+def _record_nothing(writers: Writers, station: Station, title: str) -> None:
+    """Record a check that fails: no bars count at a station that a moment asks for."""
+    sheet, face = writers.sheet, station.face
+    near, t = _near(writers, station)
+    with sheet.part(f"{COVERAGE}-{face}", title):
+        sheet.note(
+            "no-bars",
+            f"At {station.local:g} mm from the left axis of span {station.span} no {face} bars "
+            "count: none stand there, or they end there.",
+            title="Gap",
+        )
+        steps = begin(writers, sheet, station.span, face)
+        x = sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+        writers.forces(steps, _demand(writers, station, tension=False), near, x)
+        steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
+        steps.check(flexure.STRENGTH)
+
+
+def _record_place(writers: Writers, station: Station, near: End, t: float) -> Entry:
+    """Record the place of the forces of a station: inside a support, that of its face."""
+    half = half_of(writers.designed, station.span, near)
+    if t >= half:
+        return writers.sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+    writers.sheet.note(
+        "inside",
+        f"The station lies inside the support, {t:g} mm from its axis: there the moment of the "
+        "face counts.",
+        title="Place",
+    )
+    return writers.sheet.given("x_st", plain(half, "mm"), source="face of the support")
 
 
 def _demand(writers: Writers, station: Station, *, tension: bool) -> Demand:
@@ -190,8 +226,8 @@ def _record_tension(
     face: Face,
 ) -> None:
     station = _worst(found.by_tension, face, tension=True)
-    if station.F <= NOTHING:
-        return
+    if station.F <= NOTHING or (station.F_r <= 0 and station.M_f > NOTHING):
+        return  # nothing asked, or the gap stands with the moment
     designed, sheet = writers.designed, writers.sheet
     near, t = _near(writers, station)
     middle = sum(designed.forces.beam.faces(station.span)) / 2
