@@ -25,6 +25,7 @@ from lineproof.beams.continuous.typed_torques import KINDS_OF_TORSION, read_torq
 from lineproof.beams.inputs import (
     MINIMUM_RULES,
     SHAPES,
+    SNOWED_ON,
     InputReader,
     Range,
     Shape,
@@ -169,6 +170,7 @@ def read_inputs(
     fields["forces_file"] = take("forces_csv", read_forces_file, given, fields)
     check_density(fields, given, reader.faults)
     _check_slab(fields, given, reader.faults)
+    _check_snow(fields, reader.faults)
     _check_bars_given(fields, reader.faults)
     _check_method(fields, reader.faults)
     if spans:
@@ -317,6 +319,14 @@ def _check_torques(fields: Mapping[str, Any], faults: FaultList) -> None:
                 f"{fields['use']!r} gives {live}); write one of {', '.join(sorted(there))}, or the "
                 "load that turns the beam as a load as well"
             )
+
+
+def _check_snow(fields: Mapping[str, Any], faults: FaultList) -> None:
+    if fields["use"] in SNOWED_ON and fields["snow"] is None:
+        faults.add(
+            f"snow: a beam of use {fields['use']!r} carries snow; write the specified snow load, "
+            "such as '1.6 kPa', or '0 kPa' under a roof"
+        )
 
 
 def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:

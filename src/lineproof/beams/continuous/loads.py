@@ -136,7 +136,8 @@ def _choices_text(inputs: ContinuousInputs) -> str:
         f"concrete; use: {inputs.use}; exposure class {inputs.exposure}; fire-resistance rating "
         f"{inputs.fire_rating}, type {inputs.fire_aggregate} concrete; stirrups {inputs.stirrup}; "
         f"shear by the {inputs.shear_method} method; minimum reinforcement by "
-        f"{inputs.minimum_rule}; carries: {inputs.carries}."
+        f"{inputs.minimum_rule}; carries: {inputs.carries}. Bars in compression are not counted. "
+        "Top bars in the overhangs are the beam's own: bars of the slab are not counted for it."
     )
 
 
@@ -205,8 +206,9 @@ def _notes(inputs: ContinuousInputs) -> str:
     return (
         (weight if inputs.slab else "")
         + "Wind and earthquake are not carried by this beam. Every combination stands with 1.25 "
-        "and with 0.9 times dead load, with each companion load and without it; live load stands "
-        "on the spans that are worst for each section."
+        "and with 0.9 times dead load, with each companion load and without it. Live load stands "
+        "on all spans, on alternate spans and on two adjacent spans (9.2.3.1), and also on two "
+        "adjacent spans with every other span beyond them, which the building code asks for."
     )
 
 
