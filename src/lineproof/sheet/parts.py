@@ -24,6 +24,7 @@ class Parts:
         self.expected: dict[str, str] = {}
         self._parts: dict[str, Part] = {}
         self._stopped: dict[str, str] = {}
+        self._stopped_calls: dict[str, None] = {}
         self._chapter: dict[str, None] | None = None
         self._part: Part | None = None
         self._scope_of_part: dict[str, Any] = {}
@@ -70,6 +71,27 @@ class Parts:
                 self._parts.pop(key, None)
                 self._stopped.pop(key, None)
         self.expected = dict(calls)
+        for call in self._stopped_calls.keys() - self.expected.values():
+            del self._stopped_calls[call]
+
+    def begin_anew(self) -> None:
+        """Forget every part that a call was expected to make, whatever call it was."""
+        self.expect({})
+
+    def need(self, *calls: str) -> None:
+        """Refuse to go on before what some calls make is recorded, all of it.
+
+        Calls that the calculation does not have are not needed. Raises :class:`UserError`.
+        """
+        missing = {
+            call
+            for key, call in self.expected.items()
+            if key not in self._parts or key in self._stopped or call in self._stopped_calls
+        }
+        faults = [f"{call} has not been run, or stopped; run {call} first" for call in calls
+                  if call in missing]  # fmt: skip
+        if faults:
+            raise UserError(faults)
 
     @contextmanager
     def chapter(self, call: str) -> Iterator[None]:
@@ -81,11 +103,19 @@ class Parts:
             raise UserError(f"{call} was called inside a chapter; call it by itself")
         made: dict[str, None] = {}
         self._chapter = made
+        self._stopped_calls[call] = None
         try:
             yield
+            del self._stopped_calls[call]
         finally:
             self._chapter = None
+            self._expect_of(call, made)
+
+    def _expect_of(self, call: str, made: Mapping[str, None]) -> None:
+        """Expect of a call the parts it made; one that stopped is to make those before as well."""
         before = list(self.expected.items())
+        if call in self._stopped_calls:
+            made = dict(made) | {key: None for key, other in before if other == call}
         place = next((n for n, (_, other) in enumerate(before) if other == call), len(before))
         others = [row for row in before if row[1] != call and row[0] not in made]
         first = sum(row[1] != call and row[0] not in made for row in before[:place])
@@ -109,7 +139,7 @@ class Parts:
     def entries_of(self, key: str) -> dict[str, Entry]:
         """Return the entries of a recorded part by symbol, or name the call to run first."""
         part = self._parts.get(key)
-        if part is None:
+        if part is None or (key in self._stopped and part is not self._part):
             raise UserError(f"part {key!r} is not recorded{self._run_first(key)}")
         return dict(part.entries)
 

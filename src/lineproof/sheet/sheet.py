@@ -78,6 +78,7 @@ class Sheet(Finding):
         self.codes: dict[str, str] = {}
         self.member = ""
         self.scope = ""
+        self.started_with = ""
         self.not_covered: list[Mapping[str, str]] = []
 
     @classmethod
@@ -274,6 +275,9 @@ class Sheet(Finding):
         faults = [
             f"part {key!r} ({title}) stopped with an error; run it again"
             for key, title in self._stopped.items()
+        ]
+        faults += [
+            f"{call} stopped with an error; run {call} again" for call in self._stopped_calls
         ]
         faults += [
             f"part {key!r} has not been run; run {call}"

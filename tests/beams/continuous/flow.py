@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from typing import Any
 
 from lineproof import beams
@@ -33,9 +33,11 @@ MIXED: Mapping[str, Any] = {
 """A cantilever, a support held by columns, a fixed end, three depths, single loads of all kinds."""
 
 
-def start(*, project: Mapping[str, Any] = PROJECT, **changes: Any) -> beams.ContinuousBeam:
-    """Start the three-span beam with some inputs changed."""
-    sheet = Sheet("B7", "Gallery floor beam", project=project)
+def start(
+    *, project: Mapping[str, Any] = PROJECT, sheet: Sheet | None = None, **changes: Any
+) -> beams.ContinuousBeam:
+    """Start the three-span beam with some inputs changed, on a sheet given or a new one."""
+    sheet = sheet or Sheet("B7", "Gallery floor beam", project=project)
     return beams.continuous_beam(sheet, **(dict(THREE_SPANS) | changes))
 
 
@@ -57,3 +59,22 @@ def close_anyway(sheet: Sheet) -> Record:
     """Close a sheet although not every chapter has been made."""
     sheet.expected = {}
     return sheet.close()
+
+
+CALLS = (
+    "loads", "spans", "analysis", "flexure", "shear", "deflections", "anchorage", "schedule",
+    "summary",
+)  # fmt: skip
+"""The calls of the flow, in the order of the calculation."""
+
+
+def run(beam: beams.ContinuousBeam, calls: Iterable[str] = CALLS) -> Sheet:
+    """Make calls one after the other; return the sheet."""
+    for call in calls:
+        getattr(beam, call)()
+    return beam.sheet
+
+
+def record_of(**inputs: Any) -> Record:
+    """Return the record of the whole flow for the three-span beam with some inputs changed."""
+    return run(start(**inputs)).close()

@@ -39,6 +39,9 @@ from lineproof.sheet import Sheet
 from lineproof.standards.codes import CodePair
 
 LOADS_CALL, SPANS_CALL, ANALYSIS_CALL = "beam.loads()", "beam.spans()", "beam.analysis()"
+FLEXURE_CALL, SHEAR_CALL = "beam.flexure()", "beam.shear()"
+DEFLECTIONS_CALL, ANCHORAGE_CALL = "beam.deflections()", "beam.anchorage()"
+SCHEDULE_CALL, SUMMARY_CALL = "beam.schedule()", "beam.summary()"
 NOT_HERE = (
     {"check": "Concentrated live loads, unless given as loads", "clause": "NBC 4.1.5.9"},
     {"check": "Structural integrity of the building", "clause": "NBC 4.1.1.3"},
@@ -97,6 +100,7 @@ class ContinuousBeam:
 
         With ``forces_csv``, what was brought in and checked instead.
         """
+        self.sheet.need(LOADS_CALL, SPANS_CALL)
         with self.sheet.chapter(ANALYSIS_CALL):
             if self.inputs.forces_file is not None:
                 record_imported_analysis(self.model)
@@ -107,10 +111,11 @@ class ContinuousBeam:
 
     def flexure(self) -> None:
         """Record bars and resistance at every span and both faces of every support."""
+        self.sheet.need(*_BEFORE_DESIGN)
         design = self.design
         sizes = [layer.size for chosen in design.bottom.values() for layer in layers_of(chosen)]
         sizes += [top_of(chosen).web.size for chosen in design.top.values()]
-        with self.sheet.chapter("beam.flexure()"):
+        with self.sheet.chapter(FLEXURE_CALL):
             record_cover(self.sheet, self.inputs, sizes)
             for span, chosen in design.bottom.items():
                 flexure.record_sag(design.model, span, layers_of(chosen), self.pair)
@@ -121,28 +126,36 @@ class ContinuousBeam:
 
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""
-        with self.sheet.chapter("beam.shear()"):
+        self.sheet.need(*_BEFORE_DESIGN)
+        with self.sheet.chapter(SHEAR_CALL):
             record_shear(self.design)
 
     def deflections(self) -> None:
         """Record the deflections of every span."""
         refuse_deflections(self.inputs)
-        with self.sheet.chapter("beam.deflections()"):
+        self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
+        with self.sheet.chapter(DEFLECTIONS_CALL):
             record_deflections(self.model)
 
     def anchorage(self) -> None:
         """Record development, hooks, cut-off points, laps, and the cover of all moments by bars."""
-        with self.sheet.chapter("beam.anchorage()"):
+        self.sheet.need(*_BEFORE_DESIGN)
+        with self.sheet.chapter(ANCHORAGE_CALL):
             record_anchorage(self.design)
 
     def schedule(self) -> None:
         """Record bar schedule, bends, stirrup schedule and quantities."""
-        with self.sheet.chapter("beam.schedule()"):
+        self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL, SHEAR_CALL, ANCHORAGE_CALL)
+        with self.sheet.chapter(SCHEDULE_CALL):
             record_schedule(self.design)
 
     def summary(self) -> None:
         """Record the summary pages: drawings, governing tables, reactions, envelopes."""
-        with self.sheet.chapter("beam.summary()"):
+        self.sheet.need(
+            *_BEFORE_DESIGN, FLEXURE_CALL, SHEAR_CALL, DEFLECTIONS_CALL, ANCHORAGE_CALL,
+            SCHEDULE_CALL,
+        )  # fmt: skip
+        with self.sheet.chapter(SUMMARY_CALL):
             record_summary(self.design)
 
 
@@ -209,10 +222,12 @@ def continuous_beam(
     """
     given: dict[str, Any] = dict(locals())
     inputs, pair = read_inputs(given, sheet.project)
+    _begin(sheet, f"{inputs!r} {pair!r}", anew=inputs.forces_file is not None)
     prepare(sheet, pair)
     sheet.member = member_of(inputs)
     beam = ContinuousBeam(sheet, inputs, pair)
-    sheet.expect(calls_of(inputs))
+    if not sheet.expected:
+        sheet.expect(calls_of(inputs))
     sheet.not_covered = [*not_covered(inputs), *not_here(inputs)]
     load_take_down.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair, whole_beam=True)
@@ -231,6 +246,17 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     return [*rows]
 
 
+def _begin(sheet: Sheet, basis: str, *, anew: bool) -> None:
+    """Keep the chapters of a sheet that was started with the same inputs; else begin anew.
+
+    Which parts a chapter makes depends on all inputs: with others, what was made is not to be
+    taken for what they would make. A file of forces may have changed behind its name.
+    """
+    if anew or sheet.started_with != basis:
+        sheet.begin_anew()
+    sheet.started_with = basis
+
+
 def member_of(inputs: ContinuousInputs) -> str:
     """Say what kind of beam it is."""
     count = len(inputs.spans)
@@ -246,9 +272,9 @@ def calls_of(inputs: ContinuousInputs) -> dict[str, str]:
     start = "continuous_beam(...)"
     calls = {
         GIVEN: start, basics.MATERIALS: start, LOADS: LOADS_CALL, span_key(1): SPANS_CALL,
-        ANALYSIS: ANALYSIS_CALL, basics.COVER: "beam.flexure()", STIRRUPS: "beam.shear()",
-        SERVICE: "beam.deflections()", COVERAGE: "beam.anchorage()",
-        SCHEDULE: "beam.schedule()", SUMMARY: "beam.summary()",
+        ANALYSIS: ANALYSIS_CALL, basics.COVER: FLEXURE_CALL, STIRRUPS: SHEAR_CALL,
+        SERVICE: DEFLECTIONS_CALL, COVERAGE: ANCHORAGE_CALL,
+        SCHEDULE: SCHEDULE_CALL, SUMMARY: SUMMARY_CALL,
     }  # fmt: skip
     if inputs.forces_file is not None:
         del calls[SERVICE]
