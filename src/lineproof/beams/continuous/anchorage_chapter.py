@@ -12,6 +12,7 @@ from lineproof.beams.continuous.detailing_record import record_detailing
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.resistance_record import COVERAGE
+from lineproof.beams.continuous.torsion_face import record_torsion_at_face
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.record import Entry
@@ -29,7 +30,12 @@ def record_anchorage(design: Design) -> None:
     def forces(steps: Steps, demand: Demand, near: End, x: Entry | None = None) -> None:
         record_forces(steps, model, demand, near, x=x)
 
-    writers = Writers(model.sheet, design.designed, span, forces, _record_shear)
+    def torsion(steps: Steps, demand: Demand, near: End) -> None:
+        record_torsion_at_face(design, steps, demand, near)
+
+    writers = Writers(
+        model.sheet, design.designed, span, forces, _record_shear, torsion=torsion
+    )  # fmt: skip
     coverage = record_detailing(writers, design.runs)
     inputs = model.inputs
     given = inputs.bar_runs is not None or any((*inputs.bottom_bars, *inputs.top_bars))

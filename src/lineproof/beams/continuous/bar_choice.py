@@ -24,17 +24,21 @@ from lineproof.beams.continuous.section_checks import (
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import minimum
 
+FOR_SHEAR = "the bars that shear and torsion ask for (11.3.9, 11.3.10.6)"
+
 
 @dataclass(frozen=True, slots=True)
 class Section:
     """A section whose bars are chosen: its name, its numbers, the length its bars run over [mm].
 
-    Several sets of numbers stand for the faces that the same bars serve.
+    Several sets of numbers stand for the faces that the same bars serve. ``least`` is the area that
+    torsion asks of the bars within the web [mm2].
     """
 
     name: str
     numbers: tuple[Numbers, ...]
     length: float
+    least: float = 0.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -144,6 +148,9 @@ def bottom_trial(rules: Rules, stirrup: str) -> Trial:
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
         why: Counter[str] = Counter()
         for layers in _bottom_layouts(size):
+            if _area(layers) < section.least:
+                why[FOR_SHEAR] += 1
+                continue
             checks = bottom_checks(dict(section.numbers[0]), rules, layers, stirrup)
             if not fails(checks):
                 return Chosen(section.name, layers, checks), ""
@@ -172,6 +179,9 @@ def top_trial(rules: Rules, stirrup: str) -> Trial:
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
         why: Counter[str] = Counter()
         for bars in _top_layouts(section, size, sides):
+            if bars.web.area < section.least:
+                why[FOR_SHEAR] += 1
+                continue
             faces = [
                 top_checks(dict(at), rules, bars.web, bars.overhang, stirrup)
                 for at in section.numbers

@@ -9,12 +9,20 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
+from itertools import count
 from typing import Any
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers, bars_text
 from lineproof.beams.continuous import flexure
-from lineproof.beams.continuous.anchorage import available, has_hooks, hook_at
-from lineproof.beams.continuous.bar_choice import Chosen, TopBars
+from lineproof.beams.continuous.bar_choice import Bars, Chosen, TopBars
+from lineproof.beams.continuous.design_torsion import (
+    HOLDERS,
+    Asked,
+    Open,
+    fits_hook,
+    more,
+    torsion_forces,
+)
 from lineproof.beams.continuous.detailing import hook_ties, lay_bars
 from lineproof.beams.continuous.detailing_data import (
     Basis,
@@ -28,13 +36,16 @@ from lineproof.beams.continuous.detailing_given import read_given_runs, section_
 from lineproof.beams.continuous.flexure import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
+from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.shear_stretches import basis_of, span_numbers, stretches_of
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.errors import UserError
 from lineproof.standards.codes import CodePair
 
-HOLDERS = "15M"
-"""Size of the two bars that hold the stirrups where no other top bars do (common practice)."""
 MOST_ROUNDS = 4
+"""Rounds in which bars and stirrups are fitted to each other; two do as a rule."""
+MOST_FOR_TORSION = 40
+"""Times that bars are made longer or more for torsion."""
 FIRST_SPACING = 300.0
 
 
@@ -49,6 +60,8 @@ class Design:
     designed: Designed
     runs: tuple[BarRun, ...]
     stirrups: Choice
+    raised: tuple[str, ...] = ()
+    """Bars that torsion asks for beyond what the moments do, in words."""
 
     @property
     def outline(self) -> BeamOutline:
@@ -67,50 +80,117 @@ def design_of(model: Model, pair: CodePair) -> Design:
     outline = outline_of(model.sheet, model.inputs)
     basis = _basis(model, outline)
     given = _given_runs(model, basis, pair)
-    bottom_given, top_given = _given_sections(model, pair, outline, given)
-    bottom = flexure.choose_bottom(model, pair, bottom_given)
-    bare = Designed(
-        basis, model.forces, SectionBars((), (), HOLDERS), pair, breadths=_breadths(model)
+    sections = _given_sections(model, pair, outline, given)
+    asked = Asked()
+    made = first = _designed(model, pair, basis, (given, *sections), asked, None)
+    for _ in range(MOST_FOR_TORSION):
+        further = None
+        if given is None:
+            free = Open(set(made.bottom) - set(sections[0]), set(made.top) - set(sections[1]))
+            standing = stand(made.designed, made.runs)
+            further = more(asked, made.stirrups.checks, made.designed, standing, free)
+        if further is None:
+            return replace(made, raised=_raised(first, made))
+        asked = further
+        made = _designed(model, pair, basis, (given, *sections), asked, made)
+    raise UserError(
+        "torques: no bars were found that carry moment, shear and torsion everywhere; write a "
+        "wider or deeper beam, or the bars themselves as bar_runs"
     )
-    top = flexure.choose_top(model, pair, top_given, lambda j, size: _anchored(bare, j, size))
+
+
+Given = tuple[tuple[BarRun, ...] | None, dict[int, BarLayers], dict[int, TopBars]]
+"""Bars that are given: along the beam, of spans, of supports."""
+
+
+def _designed(
+    model: Model, pair: CodePair, basis: Basis, given: Given, asked: Asked, before: Design | None
+) -> Design:
+    """Return a design with the bars asked for; the stirrups of the design before are a start."""
+    runs, bottom_given, top_given = given
+    breadths = _breadths(model)
+    none = SectionBars((), (), asked.holders)
+    bare = Designed(basis, model.forces, none, pair, breadths=breadths)
+    bottom = flexure.choose_bottom(
+        model, pair, bottom_given, asked.bottom,
+        lambda k, size: k not in asked.anchored or _anchored_span(bare, k, size),
+    )  # fmt: skip
+    top = flexure.choose_top(
+        model, pair, top_given, lambda j, size: _anchored(bare, j, size), asked.top
+    )
     flexure.refuse_unfit(bottom, "bottom_bars")
     flexure.refuse_unfit(top, "top_bars")
-    designed = Designed(
-        basis, model.forces, _section_bars(model, bottom, top), pair, breadths=_breadths(model)
-    )
-    return _laid(model, pair, bottom, top, designed, given)
+    bars = _section_bars(model, bottom, top, asked.holders)
+    designed = Designed(basis, model.forces, bars, pair, breadths=breadths)
+    if before is not None:
+        designed = replace(before.designed, bars=bars, torsion={})
+    designed, laid, choice = _laid(model, designed, runs)
+    return Design(model, pair, bottom, top, designed, laid, choice)
 
 
 def _laid(
-    model: Model,
-    pair: CodePair,
-    bottom: Mapping[int, Chosen],
-    top: Mapping[int, Chosen],
-    designed: Designed,
-    given: tuple[BarRun, ...] | None,
-) -> Design:
+    model: Model, designed: Designed, given: tuple[BarRun, ...] | None
+) -> tuple[Designed, tuple[BarRun, ...], Choice]:
+    """Return bars along the beam and stirrups that rest on each other.
+
+    Both are worked out in turn until neither changes; after some rounds the bars stay as they are,
+    and the stirrups are counted as the widest met, so that the last rounds end.
+    """
     runs = lay_bars(designed) if given is None else given
-    for _ in range(MOST_ROUNDS):  # bars and stirrups settle in two rounds as a rule
+    for number in count():
         choice = _stirrups(model, designed, runs)
         stirrups = _counted(designed, choice)
-        designed = replace(
+        if number >= MOST_ROUNDS:
+            stirrups = _worse(stirrups, designed.basis.stirrups)
+        settled = replace(
             designed, shear=stretches_of(choice, designed.outline),
             basis=replace(designed.basis, stirrups=stirrups),
+            torsion=torsion_forces(choice.checks, designed.bars, stand(designed, runs)),
         )  # fmt: skip
-        if given is not None:
-            break
-        again = lay_bars(designed)
-        if again == runs:
-            break
-        runs = again
-    return Design(model, pair, bottom, top, designed, runs, choice)
+        again = runs if given is not None or number >= MOST_ROUNDS else lay_bars(settled)
+        if again == runs and stirrups == designed.basis.stirrups:
+            return settled, runs, choice
+        designed, runs = settled, again
+    raise AssertionError  # the count does not end
+
+
+def _worse(first: Stirrups, second: Stirrups) -> Stirrups:
+    """Return stirrups that count no more than either of two."""
+    return replace(
+        first,
+        spacing=max(first.spacing, second.spacing),
+        minimum=first.minimum and second.minimum,
+    )
+
+
+def _raised(first: Design, made: Design) -> tuple[str, ...]:
+    """Say which bars torsion asks for beyond what the moments do."""
+    told = [
+        f"{where}: {_text(now.bars)}, by the moments alone {_text(was.bars)}"
+        for before, after in ((first.bottom, made.bottom), (first.top, made.top))
+        for (where, was), now in zip(
+            ((chosen.section, chosen) for chosen in before.values()), after.values(), strict=True
+        )
+        if was.bars != now.bars
+    ]
+    holders = made.designed.bars.holders
+    if holders != first.designed.bars.holders:
+        told.append(f"bars that hold the stirrups: 2-{holders}, without torsion 2-{HOLDERS}")
+    return tuple(told)
+
+
+def _text(bars: Bars) -> str:
+    return str(bars) if isinstance(bars, TopBars) else bars_text(bars)
 
 
 def _anchored(bare: Designed, support: int, size: str) -> bool:
-    """Tell whether top bars of a size can be hooked into an end support, if they end there."""
-    if not bare.exterior(support) or not has_hooks(bare):
-        return True
-    return hook_at(bare, support, size).l_dh <= available(bare, support)
+    """Tell whether bars of a size can be hooked into an end support, if they end there."""
+    return not bare.exterior(support) or fits_hook(bare, support, size)
+
+
+def _anchored_span(bare: Designed, span: int, size: str) -> bool:
+    """Tell whether bottom bars of a span can be hooked into the end supports that they reach."""
+    return all(_anchored(bare, support, size) for support in (span, span + 1))
 
 
 def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choice:
@@ -172,12 +252,12 @@ def _given_sections(
 
 
 def _section_bars(
-    model: Model, bottom: Mapping[int, Chosen], top: Mapping[int, Chosen]
+    model: Model, bottom: Mapping[int, Chosen], top: Mapping[int, Chosen], size: str
 ) -> SectionBars:
-    holders = (BarLayer(2, HOLDERS),)
+    holders = (BarLayer(2, size),)
     bottoms = [layers_of(bottom[k]) if k in bottom else holders for k in range(1, model.spans + 1)]
     tops = [_laid_top(top_of(top[j])) if j in top else LaidTop() for j in range(1, model.spans + 2)]
-    return SectionBars(tuple(bottoms), tuple(tops), HOLDERS)
+    return SectionBars(tuple(bottoms), tuple(tops), size)
 
 
 def _laid_top(top: TopBars) -> LaidTop:

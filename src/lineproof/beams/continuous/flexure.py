@@ -132,10 +132,22 @@ def rules_of(model: Model) -> Rules:
     return Rules(model.inputs.shape, model.inputs.minimum_rule)
 
 
+Anchored = Callable[[int, str], bool]
+"""Tell whether bars of a size can be anchored: bottom bars of a span, top bars of a support."""
+
+
 def choose_bottom(
-    model: Model, pair: CodePair, given: Mapping[int, BarLayers]
+    model: Model,
+    pair: CodePair,
+    given: Mapping[int, BarLayers],
+    least: Mapping[int, float] | None = None,
+    anchored: Anchored | None = None,
 ) -> dict[int, Chosen]:
-    """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`."""
+    """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`.
+
+    ``least`` is the area that shear and torsion ask for, by span; ``anchored`` tells whether bars
+    of a size can be anchored in the end supports.
+    """
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
     sections: dict[int, Section] = {}
@@ -145,19 +157,32 @@ def choose_bottom(
         if layers is not None:
             made[span] = Chosen(f"span {span}", layers, bottom_checks(at, rules, layers, stirrup))
         else:
-            sections[span] = Section(f"span {span}", (at,), model.lengths[span - 1].value)
-    found = choose(list(sections.values()), bottom_trial(rules, stirrup), "bottom_bars")
+            sections[span] = Section(
+                f"span {span}", (at,), model.lengths[span - 1].value, (least or {}).get(span, 0.0)
+            )  # fmt: skip
+    numbered = {section.name: span for span, section in sections.items()}
+    search = bottom_trial(rules, stirrup)
+
+    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+        if anchored is not None and not anchored(numbered[section.name], size):
+            return None, "anchorage in the support"
+        return search(section, size)
+
+    found = choose(list(sections.values()), trial, "bottom_bars")
     return made | dict(zip(sections, found, strict=True))
 
 
-Anchored = Callable[[int, str], bool]
-"""Tell whether top bars of a size can be anchored in a support."""
-
-
 def choose_top(
-    model: Model, pair: CodePair, given: Mapping[int, TopBars], anchored: Anchored
+    model: Model,
+    pair: CodePair,
+    given: Mapping[int, TopBars],
+    anchored: Anchored,
+    least: Mapping[int, float] | None = None,
 ) -> dict[int, Chosen]:
-    """Return the top bars of every support that has a moment with the top in tension."""
+    """Return the top bars of every support that has a moment with the top in tension.
+
+    ``least`` is the area within the web that torsion asks for, by support.
+    """
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
     sections: dict[int, Section] = {}
@@ -165,7 +190,9 @@ def choose_top(
         name = f"support {support}"
         top = given.get(support)
         if top is None:
-            sections[support] = Section(name, tuple(numbers), _top_length(model, support))
+            sections[support] = Section(
+                name, tuple(numbers), _top_length(model, support), (least or {}).get(support, 0.0)
+            )  # fmt: skip
             continue
         faces = [top_checks(dict(at), rules, top.web, top.overhang, stirrup) for at in numbers]
         made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))

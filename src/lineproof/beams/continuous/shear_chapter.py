@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
+from typing import Any
 
 from lineproof.beams.continuous.bars_counted import record_area
 from lineproof.beams.continuous.bearing import (
@@ -34,6 +35,7 @@ from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.continuous.torsion_inputs import corner_bar
 from lineproof.beams.continuous.torsion_record import record_span_torsion
 from lineproof.beams.steps import Steps
+from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars
@@ -41,6 +43,11 @@ from lineproof.standards.a23_3.bars import BARS
 
 STIRRUPS = "stirrups"
 _SAME = 1e-9
+THROUGH = (
+    "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
+    "far as moment, shear and torsion together ask for, and the bars in the corners of the "
+    "stirrups run through the beam."
+)
 
 
 def _faces_with_overhang(model: Model) -> list[FaceOfSupport]:
@@ -80,8 +87,26 @@ def _record_torsion(design: Design, alike: Mapping[str, Entry]) -> dict[int, dic
             model.sheet.stand_for(place)
             steps = Steps(model.sheet, place | dict(alike))
             corner = corner_bar(design.designed, span)
-            made[span] = record_span_torsion(steps, acting, design.outline.shape, corner)
+            made[span] = record_span_torsion(
+                steps, acting, design.outline.shape, corner,
+                cantilever=design.designed.cantilever(span),
+            )  # fmt: skip
+            if span in design.designed.torsion:
+                _note_bars(steps, design)
     return made
+
+
+def _note_bars(steps: Steps, design: Design) -> None:
+    """Say what torsion does to the bars along the beam, where they are chosen here."""
+    if design.model.inputs.bar_runs is not None:
+        return
+    text = THROUGH
+    if design.raised:
+        text = f"{text} More bars than the moments ask for: {'; '.join(design.raised)}."
+    steps.sheet.note(
+        "bars-with-torsion", text, title="Bars along the beam", clause="11.3.10.6",
+        basis=COMMON_PRACTICE,
+    )  # fmt: skip
 
 
 def _record_section(design: Design, section: ShearSection, more: Mapping[str, Entry]) -> None:
@@ -183,7 +208,8 @@ def _record_reaction(steps: Steps, model: Model, support: int) -> Entry:
         return made
     entries = sheet.entries_of(ANALYSIS)
     factors = model.forces.factors_of(row)
-    terms, bound = [], {}
+    terms: list[str] = []
+    bound: dict[str, Any] = {}
     for group in groups_of(model):
         name = f"R_{support}{group.code}"
         factor = _factor(factors, group)

@@ -19,6 +19,7 @@ from lineproof.beams.continuous.shear_arrays import Truths, value
 from lineproof.beams.continuous.shear_numbers import SpanEnd
 from lineproof.beams.continuous.shear_state import Critical, SpanState
 from lineproof.beams.continuous.stirrups import Band, Change, changes, effective
+from lineproof.beams.continuous.torsion import designed_for
 from lineproof.standards.a23_3 import shear_bars, torsion
 
 Indices = np.ndarray[Any, np.dtype[np.intp]]
@@ -169,14 +170,42 @@ class SpanCheck:
         """Return stations from the left axis and the force bottom and top bars need there [N].
 
         The largest of all cases, moment, shear and torsion together; zero where torsion does not
-        count, for there longer bars stand for the shear (11.3.9.1).
+        count, for there longer bars stand for the shear (11.3.9.1). Nearer to a support than a
+        critical section its values hold.
         """
-        v = self.state.v
-        here = np.where(v["counts"], self.bars["F_lt"], 0.0)
-        there = np.where(v["counts"], self.bars["F_lc"], 0.0)
-        bottom = np.where(v["bottom"], here, there).max(axis=0)
-        top = np.where(v["bottom"], there, here).max(axis=0)
+        nearer, last = self.state.nearer, len(self.u) - 1
+        where = np.broadcast_to(np.arange(len(self.u)), nearer.shape)
+        ends = np.where(self.state.columns < sum(self.state.faces) / 2, 0, last)
+        where = np.where(nearer, ends, where)
+        bottom, top = (
+            np.take_along_axis(force, where, axis=1).max(axis=0) for force in self._by_face()
+        )
         return self.state.columns, bottom, top
+
+    def bar_areas(self) -> tuple[tuple[Floats, Floats], tuple[Floats, Floats]]:
+        """Return the area that bottom and top bars need for torsion, and that which counts [mm2].
+
+        By case and column; the area needed is zero where torsion does not count, and nearer to a
+        support than a critical section.
+        """
+        v, force = self.state.v, self.state.basis.phi_s * self.state.basis.f_y
+        there = np.where(v["bottom"], v["A_sp"], v["A_s"])
+        here = np.where(v["bottom"], v["A_s"], v["A_sp"])
+        bottom, top = (np.where(self.state.nearer, 0.0, F / force) for F in self._by_face())
+        return (bottom, here), (top, there)
+
+    def _by_face(self) -> tuple[Floats, Floats]:
+        """Return the force in the bottom and in the top bars where torsion counts, by case."""
+        v = self.state.v
+        tension = np.where(v["counts"], self.bars["F_lt"], 0.0)
+        compression = np.where(v["counts"], self.bars["F_lc"], 0.0)
+        bottom = np.where(v["bottom"], tension, compression)
+        return bottom, np.where(v["bottom"], compression, tension)
+
+    def designed_torsion(self, T_f: Floats) -> Floats:
+        """Return the torsion designed for of that which acts: all, or what is left of it."""
+        acting = self.state.numbers.torsion
+        return T_f if acting is None else designed_for(acting, T_f)
 
     def _capped(self, F_lt: Floats) -> Floats:
         """Return the force on the tension side at the ends, capped where 11.3.9.4 lets it."""

@@ -173,7 +173,7 @@ def _section(
         spacing=check.bands[check.owner(row, column)].spacing,
         spot=spot,
         counts=bool(v["counts"][row, column]),
-        torques=_torques(check, forces, row),
+        torques=torques_of(check, forces, row),
         compatibility=acting is not None and acting.compatibility,
         cantilever="free" in (state.numbers.left.held, state.numbers.right.held),
         cap=check.cap(end, row) if at_end and not v["counts"][row, column] else None,
@@ -200,7 +200,8 @@ def _near_loads(check: SpanCheck, forces: Forces, end: End, row: int, column: in
     )
 
 
-def _torques(check: SpanCheck, forces: Forces, row: int) -> tuple[tuple[str, float, float], ...]:
+def torques_of(check: SpanCheck, forces: Forces, row: int) -> tuple[tuple[str, float, float], ...]:
+    """Return load type, torque per length and factor of the torques that act in a case."""
     acting, span = check.state.numbers.torsion, check.state.numbers.span
     if acting is None:
         return ()

@@ -27,6 +27,7 @@ from lineproof.beams.continuous.resistance import (
 )
 from lineproof.beams.continuous.shear_numbers import (
     Held,
+    Method,
     ShearBasis,
     SpanEnd,
     SpanNumbers,
@@ -47,9 +48,13 @@ def basis_of(model: Model) -> ShearBasis:
         n: find(n).value for n in ("b_w", "f_c", "f_y", "phi_c", "phi_s", "lambda_", "a_max", "E_s")
     }
     return ShearBasis(
-        **numbers, cover=find("c_c").value, method=inputs.shear_method, stirrup=inputs.stirrup,
-        legs=inputs.stirrup_legs, closed=inputs.closed_stirrups,
+        **numbers, cover=find("c_c").value, method=_method(inputs.shear_method),
+        stirrup=inputs.stirrup, legs=inputs.stirrup_legs, closed=inputs.closed_stirrups,
     )  # fmt: skip
+
+
+def _method(typed: str) -> Method:
+    return "simplified" if typed == "simplified" else "general"
 
 
 @dataclass(frozen=True, slots=True)

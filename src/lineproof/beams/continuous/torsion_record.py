@@ -2,16 +2,16 @@
 
 from __future__ import annotations
 
-from typing import Any
+from typing import Any, Protocol
 
 from lineproof.beams.continuous.shear_numbers import ShearBasis
-from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.torsion import AREAS, SpanTorsion
 from lineproof.beams.inputs import Shape
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.formula import FROM_MEMORY
 from lineproof.record import Entry
+from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars
 from lineproof.standards.a23_3 import torsion as clause
 
@@ -70,12 +70,41 @@ def record_span_torsion(
     return made | {name: steps.entry(name) for name in ("A_oh", "p_h", "A_o")}
 
 
+def section_of_torsion(sheet: Sheet, span: int, torsion: SpanTorsion) -> dict[str, Entry]:
+    """Return what :func:`record_span_torsion` recorded in the part of a span."""
+    entries = sheet.entries_of(f"torsion-{span}")
+    names = ("T_cr", "A_oh", "p_h", "A_o", *(_symbol(kind) for kind in torsion.torques))
+    made = {name: entries[name] for name in names}
+    whole = torsion.compatibility and clause.T_CR_FLANGE.symbol in entries
+    return made | {"T_crd": entries[clause.T_CR_FLANGE.symbol if whole else "T_cr"]}
+
+
 def _symbol(kind: str) -> str:
     """Return the symbol of the torque per length by a load type."""
     return f"t_{kind.replace('_', '')}"
 
 
-def record_torsion(steps: Steps, basis: ShearBasis, section: ShearSection) -> None:
+class Turned(Protocol):
+    """A section with what its torsion rests on, as :class:`ShearSection` has it."""
+
+    @property
+    def torques(self) -> tuple[tuple[str, float, float], ...]:
+        """Load type, torque per length and factor of the case."""
+
+    @property
+    def compatibility(self) -> bool:
+        """Whether the frame can redistribute the torsion."""
+
+    @property
+    def cantilever(self) -> bool:
+        """Whether the span is held against turning at one end only."""
+
+    @property
+    def place(self) -> str:
+        """At d_v from the face, at the face, or a station along the span."""
+
+
+def record_torsion(steps: Steps, basis: ShearBasis, section: Turned) -> None:
     """Record inside the open part the torsion at a section and whether it counts.
 
     Needs what :func:`record_span_torsion` returns in place, and l_n, x_f, d_v, b_sn.
@@ -97,7 +126,7 @@ def record_torsion(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
     steps.bind(T_f=T_f)
 
 
-def _record_torque(steps: Steps, section: ShearSection) -> Entry:
+def _record_torque(steps: Steps, section: Turned) -> Entry:
     """Record the torsion at a section by the torques along its span."""
     terms = " + ".join(f"{factor:.12g}*{_symbol(kind)}" for kind, _, factor in section.torques)
     if any(torque * factor < 0 for _, torque, factor in section.torques):

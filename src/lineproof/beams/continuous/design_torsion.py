@@ -1,0 +1,236 @@
+"""What torsion asks of the bars of a beam: forces along its spans, and more bars where they lack.
+
+Where torsion counts, the bars of both faces carry it together with moment and shear (11.3.10.6).
+Bars are laid for that force first; only where the bars of a section cannot carry it however long
+they are, the section gets more.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from collections.abc import Set as AbstractSet
+from dataclasses import dataclass, field, replace
+
+import numpy as np
+
+from lineproof.beams.choice import SIZES
+from lineproof.beams.continuous.anchorage import available, has_hooks, hook_at
+from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
+from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.resistance import Standing
+from lineproof.beams.continuous.resistance_cover import yield_force
+from lineproof.beams.continuous.resistance_demand import end_tension
+from lineproof.beams.continuous.shear_check import SpanCheck
+from lineproof.errors import UserError
+from lineproof.standards.a23_3 import torsion
+from lineproof.standards.a23_3.bars import BARS
+
+HOLDERS = "15M"
+"""Size of the two bars that hold the stirrups where no other top bars do (common practice)."""
+RESERVE = 0.997
+"""Part of the bars that torsion may use: the layout of bars keeps two thousandths itself."""
+STEPS = 4
+"""Steps in which bars are counted over their development length for shear (shear_stretches)."""
+
+
+@dataclass(frozen=True, slots=True)
+class Asked:
+    """What the sections must have beyond what their moments ask for.
+
+    Least areas [mm2] of the bottom bars by span and of the top bars within the web by support, the
+    size of the bars that hold the stirrups, and the spans whose bottom bars must be of a size that
+    is anchored in the end supports.
+    """
+
+    bottom: Mapping[int, float] = field(default_factory=dict)
+    top: Mapping[int, float] = field(default_factory=dict)
+    holders: str = HOLDERS
+    anchored: AbstractSet[int] = frozenset()
+
+
+@dataclass(frozen=True, slots=True)
+class Lack:
+    """Bars that a face lacks at a station from the left axis of a span: their area [mm2].
+
+    ``needed`` is the area that torsion, moment and shear need there.
+    """
+
+    span: int
+    face: Face
+    x: float
+    near: int
+    needed: float
+    area: float
+
+
+@dataclass(frozen=True, slots=True)
+class Open:
+    """The spans and supports whose bars are open to choose."""
+
+    spans: AbstractSet[int]
+    supports: AbstractSet[int]
+
+
+def torsion_forces(
+    checks: Sequence[SpanCheck], bars: SectionBars, standing: Iterable[Standing]
+) -> dict[int, TorsionForces]:
+    """Return what torsion asks of the bars, by span, where it counts.
+
+    At the sections of shear a bar counts in steps over its development length: it must be long
+    enough up to a step away from each station. No more is asked of the length of top bars than all
+    bars of their support carry: what lacks beyond that is no matter of length.
+    """
+    made = {}
+    step = max((max(bars.rise_start, bars.rise_end) for bars in standing), default=0.0) / STEPS
+    for check in checks:
+        state, span = check.state, check.state.numbers.span
+        acting = state.numbers.torsion
+        if acting is None or not state.v["counts"].any():
+            continue
+        x, bottom, top = check.bar_forces()
+        force = state.basis.phi_s * state.basis.f_y * RESERVE
+        whole = np.array([force * _whole(bars, support) for support in _nearest(check).tolist()])
+        top = np.minimum(top, whole)
+        at, place = np.unique(x, return_inverse=True)
+        forces = np.zeros((2, len(at)))
+        for row, each in zip(forces, (bottom, top), strict=True):
+            np.maximum.at(row, place, each)
+        beside = np.abs(at[:, None] - at) <= step
+        forces = np.where(beside, forces[:, None, :], 0.0).max(axis=2)
+        limit = acting.values["T_cr"]
+        ends = [np.where(_counts(T, limit), check.designed_torsion(T), 0.0)
+                for T in (state.v["T_all"][:, 1], state.v["T_all"][:, -2])]  # fmt: skip
+        made[span] = TorsionForces(
+            at, forces[0], forces[1], (ends[0], ends[1]), acting.values["p_h"],
+            acting.values["A_o"],
+        )  # fmt: skip
+    return made
+
+
+def _whole(bars: SectionBars, support: int) -> float:
+    """Return the area of all top bars of a support, or of those that hold the stirrups [mm2]."""
+    top = bars.top[support - 1]
+    if not top.web:
+        return 2 * BARS.number(bars.holders, "A_b")
+    web = sum(layer.area for layer in top.web)
+    return web + top.overhang * BARS.number(top.web[0].size, "A_b")
+
+
+def _nearest(check: SpanCheck) -> np.ndarray:
+    """Return the support whose top bars belong to each column: of a cantilever, the one it has."""
+    state, span = check.state, check.state.numbers.span
+    if state.numbers.left.held == "free":
+        return np.full(len(state.columns), span + 1)
+    if state.numbers.right.held == "free":
+        return np.full(len(state.columns), span)
+    return np.where(state.columns < sum(state.faces) / 2, span, span + 1)
+
+
+def _counts(T: np.ndarray, T_cr: float) -> np.ndarray:
+    """Tell in which cases a torsion counts."""
+    return np.array([torsion.COUNTS.holds(t, 0.25 * T_cr) for t in T.tolist()])
+
+
+def lacks(checks: Sequence[SpanCheck]) -> Iterator[Lack]:
+    """Give the stations at which bars lack for torsion, the worst of each half of a span."""
+    for check in checks:
+        state, span = check.state, check.state.numbers.span
+        if not state.v["counts"].any():
+            continue
+        near = _nearest(check)
+        faces: tuple[Face, Face] = ("bottom", "top")
+        for face, (needed, area) in zip(faces, check.bar_areas(), strict=True):
+            lack = np.where(needed > 0, needed / RESERVE - area, 0.0)
+            for support in np.unique(near).tolist():
+                here = np.where(near == support, lack, 0.0)
+                at = np.unravel_index(int(here.argmax()), here.shape)
+                if here[at] > 0:
+                    yield Lack(
+                        span, face, float(state.columns[at[1]]), support,
+                        float(needed[at]) / RESERVE, float(here[at]),
+                    )  # fmt: skip
+
+
+def more(
+    asked: Asked,
+    checks: Sequence[SpanCheck],
+    designed: Designed,
+    standing: Sequence[Standing],
+    free: Open,
+) -> Asked | None:
+    """Return what must be asked beyond ``asked``; None where the bars carry everything."""
+    made = asked
+    for lack in lacks(checks):
+        made = _with(made, asked, lack, designed.bars, free)
+    for span, area in end_lacks(designed, standing):
+        if span in free.spans:
+            least = max(made.bottom.get(span, 0.0), area)
+            made = replace(
+                made, bottom={**made.bottom, span: least}, anchored=made.anchored | {span}
+            )
+    return None if made == asked else made
+
+
+def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tuple[int, float]]:
+    """Give the end spans whose bottom bars lack anchorage in the end support (11.3.9.5).
+
+    With each the area that must be anchored there [mm2].
+    """
+    last = len(designed.outline.supports)
+    for support, span in ((1, 1), (last, last - 1)):
+        if not designed.exterior(support):
+            continue
+        face = designed.outline.faces(span)[0 if support == 1 else 1]
+        there = [bars for bars in standing if bars.run.face == "bottom"]
+        area = sum(bars.run.area * float(bars.developed(np.array([face]))[0]) for bars in there)
+        needed = end_tension(designed, support) / yield_force(designed)
+        hooked = {bars.run.size for bars in there if _hooked(bars.run, support)}
+        if area < needed or not all(fits_hook(designed, support, size) for size in hooked):
+            yield span, needed
+
+
+def _hooked(run: BarRun, support: int) -> str:
+    return run.hook_start if support == 1 else run.hook_end
+
+
+def fits_hook(designed: Designed, support: int, size: str) -> bool:
+    """Tell whether a hook of a size is developed at the inner face of an end support."""
+    if not has_hooks(designed):
+        return True
+    return hook_at(designed, support, size).l_dh <= available(designed, support)
+
+
+def _with(made: Asked, before: Asked, lack: Lack, bars: SectionBars, free: Open) -> Asked:
+    if lack.face == "bottom" and lack.span in free.spans:
+        own = sum(layer.area for layer in bars.bottom[lack.span - 1])
+        most = max(made.bottom.get(lack.span, 0.0), own + lack.area)
+        return replace(made, bottom={**made.bottom, lack.span: most})
+    if lack.face == "top":
+        web = bars.top[lack.near - 1].web
+        own = sum(layer.area for layer in web)
+        if web and lack.near in free.supports:
+            most = max(made.top.get(lack.near, 0.0), own + lack.area)
+            return replace(made, top={**made.top, lack.near: most})
+        if web:
+            return made  # given bars fail their check
+    elif not _held_alone(bars, lack):
+        return made  # given bars fail their check
+    return replace(made, holders=_thicker(before.holders, lack))
+
+
+def _held_alone(bars: SectionBars, lack: Lack) -> bool:
+    """Tell whether only the bars that hold the stirrups stand at the bottom: a cantilever."""
+    return all(layer.size == bars.holders for layer in bars.bottom[lack.span - 1])
+
+
+def _thicker(size: str, lack: Lack) -> str:
+    """Return the next size of the two bars that hold the stirrups."""
+    sizes = sorted(SIZES, key=lambda each: BARS.number(each, "d_b"))
+    later = sizes[sizes.index(size) + 1 :]
+    if not later:
+        raise UserError(
+            f"torques: span {lack.span} needs {lack.needed:.0f} mm2 of {lack.face} bars at "
+            f"{lack.x / 1000:.2f} m from its left axis, more than two bars in the corners give; "
+            "write a wider or deeper beam, or a smaller torque"
+        )
+    return later[0]
