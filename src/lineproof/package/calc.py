@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from lineproof.package.prose import Prose
+from lineproof.package.repeats import Group
 from lineproof.package.summary import (
     Confirmation,
     Failure,
@@ -19,13 +20,17 @@ from lineproof.typeset.rows import PrintedRow
 
 @dataclass(frozen=True, slots=True)
 class PartBlock:
-    """A part of the working: its rows under its heading."""
+    """A part of the working: its rows under its heading.
+
+    ``groups`` hold the rows in order, those that repeat lines of earlier parts apart.
+    """
 
     key: str
     anchor: str
     label: str
     title: str
     rows: tuple[PrintedRow, ...]
+    groups: tuple[Group, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -80,6 +85,12 @@ class Calc:
     def has_summary(self) -> bool:
         """Tell whether there is anything for summary pages."""
         return bool(self.summary or self.front)
+
+    @property
+    def repeats(self) -> bool:
+        """Tell whether any line of the working repeats an earlier one."""
+        parts = (block for block in self.blocks if isinstance(block, PartBlock))
+        return any(group.repeated for part in parts for group in part.groups)
 
     @property
     def in_front(self) -> frozenset[str]:

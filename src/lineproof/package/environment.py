@@ -15,7 +15,7 @@ from functools import cache
 from typing import TYPE_CHECKING, Any
 from urllib.parse import quote
 
-from lineproof.package.layout import cut, fitted, fitted_result
+from lineproof.package.layout import cut, fitted, fitted_result, whole, working_lines
 from lineproof.package.prose import Prose, prose_html, prose_tree
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import printable
@@ -186,6 +186,8 @@ def _filters() -> dict[str, Any]:
     return {
         "plain": plain,
         "fitted": fitted,
+        "whole": whole,
+        "working_lines": working_lines,
         "fitted_result": fitted_result,
         "cut": cut,
         "sentence": lambda text: text[:1].upper() + text[1:],

@@ -2,13 +2,15 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from itertools import groupby
 
 from lineproof.typeset.chains import Chain
 from lineproof.typeset.glyphs import printable
 from lineproof.typeset.measure import broken, shrink, width
-from lineproof.typeset.nodes import Math
+from lineproof.typeset.nodes import Math, row
 from lineproof.typeset.plain import plain
+from lineproof.typeset.rows import PrintedRow
 
 WORKING_WIDTH = 33.0
 """Width of the working column, in em of its text."""
@@ -30,15 +32,47 @@ class Piece:
 
 @dataclass(frozen=True, slots=True)
 class FittedChain:
-    """A chain as the printers lay it out: left side, then pieces that wrap between each other.
-
-    ``wraps`` tells that it may need more than one line.
-    """
+    """A chain as the printers lay it out: left side, then pieces that wrap between each other."""
 
     lead: str
     head: tuple[Piece, ...]
     pieces: tuple[Piece, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class WorkingLine:
+    """Chains that stand on one line, and the conclusion where it follows them.
+
+    A chain that ``wraps`` stands alone.
+    """
+
+    chains: tuple[Chain, ...]
     wraps: bool
+    conclusion: str = ""
+
+
+def working_lines(printed: PrintedRow) -> tuple[WorkingLine, ...]:
+    """Return the working of a row line by line: short chains side by side, long ones alone."""
+    lines = []
+    for wraps, group in groupby(printed.chains, _wraps):
+        chains = tuple(group)
+        lines += [WorkingLine((c,), wraps=True) for c in chains] if wraps else []
+        lines += [] if wraps else [WorkingLine(chains, wraps=False)]
+    if printed.conclusion and (not lines or lines[-1].wraps):
+        lines.append(WorkingLine((), wraps=False))
+    if lines:
+        lines[-1] = replace(lines[-1], conclusion=printed.conclusion)
+    return tuple(lines)
+
+
+def whole(chain: Chain) -> Math:
+    """Return a short chain as one stretch of mathematics."""
+    return row([chain.head, *chain.pieces])
+
+
+def _wraps(chain: Chain) -> bool:
+    """Tell whether a chain may need more than one line."""
+    return width(whole(chain)) > _SURELY_ONE_LINE * WORKING_WIDTH
 
 
 def fitted(chain: Chain) -> FittedChain:
@@ -51,12 +85,10 @@ def fitted(chain: Chain) -> FittedChain:
     if long_head:
         pieces = [*broken(chain.head, room), *pieces]
         heads = []
-    total = sum(map(width, heads + pieces))
     return FittedChain(
         chain.lead,
         tuple(_piece(part, room) for part in heads),
         tuple(_piece(part, room) for part in pieces),
-        wraps=total > _SURELY_ONE_LINE * WORKING_WIDTH,
     )
 
 

@@ -19,6 +19,7 @@ from lineproof.package.merged import (
     uncovered,
 )
 from lineproof.package.prose import Mark, Prose, read_prose
+from lineproof.package.repeats import Worked
 from lineproof.package.summary import (
     Failure,
     NotationRow,
@@ -224,10 +225,11 @@ class _Builder:
         self._check_anchors([key for kind, key in steps if kind == "part"], parts)
         blocks: list[PartBlock | ProseBlock] = []
         values = self._values()
+        worked = Worked(self.marks)
         level = _PART_LEVEL - 1
         for kind, content in steps:
             if kind == "part" and content in parts:
-                blocks.append(self._part(parts[content]))
+                blocks.append(self._part(parts[content], worked))
                 level = _PART_LEVEL
             elif kind == "prose":
                 prose, level = _levelled(self._prose(content, values), level)
@@ -269,13 +271,15 @@ class _Builder:
                 bare.setdefault(entry["symbol"], []).append(math)
         return values | {symbol: maths[0] for symbol, maths in bare.items() if len(maths) == 1}
 
-    def _part(self, part: Mapping[str, Any]) -> PartBlock:
+    def _part(self, part: Mapping[str, Any], worked: Worked) -> PartBlock:
+        rows = _once_named([self.rows[entry["id"]] for entry in part["entries"]])
         return PartBlock(
             key=part["key"],
             anchor=f"{self.prefix}part-{part['key']}",
             label=part.get("label", ""),
             title=part.get("title", ""),
-            rows=_once_named([self.rows[entry["id"]] for entry in part["entries"]]),
+            rows=rows,
+            groups=worked.groups(part["entries"], rows),
         )
 
 

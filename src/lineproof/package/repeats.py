@@ -1,0 +1,99 @@
+"""Lines of the working that are equal, number for number, to earlier ones.
+
+A beam that is alike on both sides is worked twice in the record, since each line rests on entries
+of its own. On paper the second working would tell nothing new: where formula, clause, printed
+numbers and result of a line are those of an earlier line, its result stands with the number of
+that line. Nothing is left out of the record, and every line keeps its label and its anchor.
+"""
+
+from __future__ import annotations
+
+import json
+import math
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from itertools import groupby
+from typing import Any
+
+from lineproof.typeset.rows import PrintedRow
+
+Entry = Mapping[str, Any]
+
+_SAME = 1e-9
+_REPEATABLE = frozenset({"given", "lookup", "line", "found", "decision", "check"})
+_NUMBERS = ("value", "left", "right", "utilisation")
+_OWN = frozenset({"id", "label", "title", "digest", "args", "closing", *_NUMBERS})
+"""What of an entry is its own, or is compared apart."""
+
+
+@dataclass(frozen=True, slots=True)
+class Repeated:
+    """A line, and id and label of the earlier one whose working it repeats."""
+
+    row: PrintedRow
+    id: str
+    label: str
+
+
+@dataclass(frozen=True, slots=True)
+class Group:
+    """Neighbouring rows of a part: such that are worked, or such that repeat earlier ones."""
+
+    rows: tuple[PrintedRow, ...] = ()
+    repeated: tuple[Repeated, ...] = ()
+
+
+class Worked:
+    """The lines that have been worked so far, in the order of print."""
+
+    def __init__(self, marked: Iterable[str]) -> None:
+        """Begin with nothing; lines with one of the ids ``marked`` are always worked."""
+        self._marked = frozenset(marked)
+        self._lines: dict[str, Entry] = {}
+
+    def groups(self, entries: Sequence[Entry], rows: Sequence[PrintedRow]) -> tuple[Group, ...]:
+        """Return the rows of the next part in order, those that repeat earlier parts apart."""
+        keys = [self._key(entry) for entry in entries]
+        told = [
+            self._told(entry, row, key) for entry, row, key in zip(entries, rows, keys, strict=True)
+        ]
+        for entry, key in zip(entries, keys, strict=True):
+            if key:
+                self._lines.setdefault(key, entry)
+        return tuple(_grouped(told))
+
+    def _key(self, entry: Entry) -> str:
+        """Return all that a line shows of its working, "" where it must be worked in any case."""
+        failed = entry["kind"] == "check" and not entry["holds"]
+        if entry["kind"] not in _REPEATABLE or entry["id"] in self._marked or failed:
+            return ""
+        closing = entry.get("closing") or {}
+        return json.dumps(
+            {name: entry[name] for name in entry if name not in _OWN}
+            | {"closing": {name: closing[name] for name in closing if name not in _OWN}},
+            sort_keys=True,
+        )
+
+    def _told(self, entry: Entry, row: PrintedRow, key: str) -> PrintedRow | Repeated:
+        seen = self._lines.get(key) if key else None
+        if seen is None or not _same_numbers(entry, seen):
+            return row
+        return Repeated(row, seen["id"], seen["label"])
+
+
+def _same_numbers(one: Entry, other: Entry) -> bool:
+    """Tell whether the numbers behind two equal prints are equal, but for their last bits."""
+    pairs = ((one, other), (one.get("closing") or {}, other.get("closing") or {}))
+    return all(
+        math.isclose(a[name] or 0.0, b[name] or 0.0, rel_tol=_SAME, abs_tol=_SAME)
+        for a, b in pairs
+        for name in _NUMBERS
+        if name in a and name in b
+    )
+
+
+def _grouped(told: Iterable[PrintedRow | Repeated]) -> Iterator[Group]:
+    """Gather neighbours that are told alike."""
+    for repeated, items in groupby(told, lambda item: isinstance(item, Repeated)):
+        group = tuple(items)
+        yield Group(repeated=group) if repeated else Group(rows=group)  # type: ignore[arg-type]
