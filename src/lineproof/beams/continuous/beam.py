@@ -126,7 +126,7 @@ class ContinuousBeam:
 
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""
-        self.sheet.need(*_BEFORE_DESIGN)
+        self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
         with self.sheet.chapter(SHEAR_CALL):
             record_shear(self.design)
 
@@ -139,7 +139,7 @@ class ContinuousBeam:
 
     def anchorage(self) -> None:
         """Record development, hooks, cut-off points, laps, and the cover of all moments by bars."""
-        self.sheet.need(*_BEFORE_DESIGN)
+        self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
         with self.sheet.chapter(ANCHORAGE_CALL):
             record_anchorage(self.design)
 
