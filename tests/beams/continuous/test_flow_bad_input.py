@@ -1,0 +1,289 @@
+"""Bad input: every fault at once, with the input, what was given and what to type; no record."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+import pytest
+
+from lineproof.errors import UserError
+from lineproof.sheet import Sheet
+
+from .flow import CALLS, PROJECT, start
+
+BOTTOM = {"face": "bottom", "bars": "4-25M", "start": "-0.15 m", "end": "24.55 m"}
+TOP = {"face": "top", "bars": "5-25M", "start": "-0.15 m", "end": "24.55 m"}
+EDGE: dict[str, Any] = {
+    "shape": "L", "tributary_width": "1.7 m", "torques": {"D": "14 kN.m", "L": "9 kN.m"},
+}  # fmt: skip
+P24: dict[str, Any] = {"codes": {"pair": "NBC 2025 + A23.3:24"}}
+
+
+def refused_at_start(**changes: Any) -> list[str]:
+    """Return the faults of inputs; nothing stands on the sheet."""
+    sheet = Sheet("B7", "Gallery floor beam", project=PROJECT)
+    with pytest.raises(UserError) as caught:
+        start(sheet=sheet, **changes)
+    assert sheet.parts == ()
+    assert sheet.expected == {}
+    return list(caught.value.faults)
+
+
+def refused_at(stage: str, *, project: Mapping[str, Any] = PROJECT, **changes: Any) -> list[str]:
+    """Return the faults at a call: it records nothing half-way, and the sheet does not close."""
+    beam = start(project=project, **changes)
+    for call in CALLS[: CALLS.index(stage)]:
+        getattr(beam, call)()
+    before = beam.sheet.parts
+    with pytest.raises(UserError) as caught:
+        getattr(beam, stage)()
+    assert beam.sheet.parts == before
+    with pytest.raises(UserError, match=rf"run beam\.{stage}\(\)"):
+        beam.sheet.close()
+    return list(caught.value.faults)
+
+
+def matches(faults: list[str], *wanted: str) -> None:
+    """Compare faults with the starts of those wanted, one by one."""
+    assert len(faults) == len(wanted), faults
+    for fault, start_of_it in zip(faults, wanted, strict=True):
+        assert start_of_it in fault, fault
+
+
+def test_spans_of_nothing_and_of_500_m() -> None:
+    matches(
+        refused_at_start(spans=["0 m", "500 m", "7.6 m"]),
+        "spans, span 1: '0 m' is zero; write a positive value such as",
+        "spans, span 2: '500 m' is outside 0.5 to 40 m",
+    )
+    matches(
+        refused_at_start(spans=["-2 m", "9.2 m", "7.6"], f_c="320 MPa"),
+        "spans, span 1: '-2 m'",
+        "spans, span 3: '7.6' has no unit; write '7.6 m'",
+        "f_c: '320 MPa'",
+    )
+
+
+def test_loads_outside_their_span() -> None:
+    """Each fault of each load, the unknown type beside the place that lies outside."""
+    matches(
+        refused_at_start(
+            loads=[
+                {"type": "L", "span": 2, "point": "4 kN", "at": "9.3 m"},
+                {"type": "L", "span": 9, "point": "4 kN", "at": "1 m"},
+                {"type": "Q", "span": 1, "line": "4 kN/m", "from": "3 m", "to": "8 m"},
+                {"type": "D", "span": 3, "line": "4 kN/m", "from": "5 m", "to": "2 m"},
+                {"type": "D", "span": 3, "point": "4 kN"},
+            ]
+        ),
+        "loads, load 1: at 9.3 m lies outside span 2 of 9.2 m; write a distance from the left axis",
+        "loads, load 2: span '9'; write 1 to 3, or 'all'",
+        "loads, load 3: type 'Q'; write one of D, L, L_st, S",
+        "loads, load 3: to 8 m lies outside span 1 of 7.6 m",
+        "loads, load 4: from 5 m to 2 m; write from < to",
+        "loads, load 5: 'at' is missing; write for example 'at': '1.2 m'",
+    )
+
+
+def test_unstable_supports_are_named() -> None:
+    matches(
+        refused_at_start(spans=["3 m", "3 m"], supports=["free", "column 450 mm", "free"]),
+        "supports: the beam is unstable: it turns about support 2, its only support, which is "
+        "simple; write 'fixed' there or add a support",
+    )
+    matches(
+        refused_at_start(supports=["girder 400 mm", "free", "column 450 mm", "girder 400 mm"]),
+        "support 2: 'free' between two spans; only the ends can be free",
+    )
+    matches(refused_at_start(spans=["7 m"], supports=["free", "free"]), "unstable")
+
+
+def test_a_support_wider_than_the_span() -> None:
+    faults = refused_at_start(
+        spans=["2.6 m", "9.2 m", "7.6 m"],
+        supports=["girder 400 mm", "column 2900 mm", "column 450 mm", "girder 400 mm"],
+    )
+    assert "support 2: width 2900 mm is wider than span 1 of 2600 mm; write a smaller" in faults[0]
+
+
+def test_deep_beams_brackets_and_openings() -> None:
+    """Clear 5.175 m < 2 x 2.7 m; 1.2 - 0.225 = 0.975 m < 1.0 m; a fault each."""
+    matches(
+        refused_at_start(
+            spans=["5.6 m", "9.2 m", "1.2 m"], h=["2700 mm", "620 mm", "1000 mm"],
+            supports=["girder 400 mm", "column 450 mm", "column 450 mm", "free"],
+        ),
+        "span 1: its clear length of 5.175 m is less than twice h of 2700 mm: a deep beam is "
+        "outside the method; use strut-and-tie (A23.3, 10.7)",
+        "span 3: its clear length of 0.975 m is less than h of 1000 mm: so short a cantilever",
+    )  # fmt: skip
+    matches(
+        refused_at_start(web_openings="200 x 150 at 2 m"),
+        "web_openings: '200 x 150 at 2 m': a beam with web openings is outside the method; write "
+        "'none'",
+    )
+
+
+def test_contradictory_bars() -> None:
+    """The same bars by section and along the beam; bars that are none."""
+    matches(
+        refused_at_start(
+            bar_runs=[BOTTOM, TOP], bottom_bars="4-25M", top_bars=["3-20M"] + [None] * 3
+        ),
+        "bottom_bars: 4-25M at span 1 is given beside bar_runs, which hold all bars; write "
+        "bottom_bars = None, or bar_runs = None",
+        "top_bars: 3-20M at support 1 is given beside bar_runs",
+    )  # fmt: skip
+    matches(
+        refused_at_start(bottom_bars=["4x25", None], top_bars=["2-99M", None, None, None]),
+        "bottom_bars: 2 given; write 3, one a span",
+        "bottom_bars, span 1: '4x25' is not understood; write '4-25M'",
+        "top_bars, support 1: '99M' is not a Canadian bar; write one of 10M",
+    )
+
+
+def test_more_bars_than_fit() -> None:
+    """14-25M in a web of 380 mm, by section and along the beam: a fault a span, none recorded."""
+    matches(
+        refused_at("flexure", bottom_bars="14-25M"),
+        *(f"bottom_bars: 14-25M do not fit into the web at span {k}; write fewer or larger bars"
+          for k in (1, 2, 3)),
+    )  # fmt: skip
+    matches(
+        refused_at("flexure", bar_runs=[BOTTOM | {"bars": "12-25M"}, TOP | {"bars": "9-25M"}]),
+        "bottom bars, layer 1, 12200 mm from the axis of support 1: 12 bars up to 25M stand side "
+        "by side, -2 mm apart, at least 35 mm; write fewer bars there, or a second layer",
+        "top bars, layer 1",
+    )
+
+
+def test_bars_along_the_beam_that_cannot_stand() -> None:
+    """A hook in mid-span, ends outside the beam, a face that is none: every fault at once."""
+    matches(
+        refused_at(
+            "flexure",
+            bar_runs=[
+                BOTTOM | {"end": "12 m", "hook_end": "90"},
+                BOTTOM | {"start": "13 m", "end": "32 m"},
+                TOP | {"face": "side"},
+                TOP | {"start": "9 m", "end": "2 m"},
+                TOP | {"bars": "five"},
+            ],
+        ),
+        "bar run 1, hook_end: the bars end at 12000 mm, not at an end support or a free end; "
+        "write hook_end='' or end the bars there",
+        "bar run 2, end: 32000 mm is outside the beam, which goes from -200 to 24600 mm",
+        "bar run 3, face: 'side'; write one of 'bottom', 'top'",
+        "bar run 4: starts at 9000 mm and ends at 2000 mm; write start below end",
+        "bar run 5, bars: 'five' is not understood; write '2-25M'",
+    )
+
+
+def test_no_bars_at_midspan() -> None:
+    """Runs that leave the middle of span 2 without any bottom bars name the place."""
+    matches(
+        refused_at(
+            "flexure",
+            bar_runs=[BOTTOM | {"end": "12.1 m"}, BOTTOM | {"start": "12.3 m"}, TOP],
+        ),
+        "bar runs: no bottom bars stand at the middle of span 2, 12200 mm from the axis of "
+        "support 1; write a run of bars that passes there",
+    )
+
+
+def test_stirrups_closer_than_the_clear_space() -> None:
+    """60 - 11.3 = 49 mm clear, 80 - 11.3 = 69 mm; a zone outside its span beside them."""
+    matches(
+        refused_at(
+            "flexure",
+            stirrups=[
+                {"span": 1, "spacing": "60 mm"},
+                {"span": 2, "spacing": "80 mm"},
+                {"span": 3, "spacing": "200 mm", "to": "30 m"},
+                {"span": 4, "spacing": "200 mm"},
+                {"span": 3},
+            ],
+        ),
+        "stirrups, zone 1: '60 mm' leaves 49 mm between 10M stirrups, less than the 75 mm for "
+        "placing the concrete (common practice); write at least '87 mm'",
+        "stirrups, zone 2: '80 mm' leaves 69 mm",
+        "stirrups, zone 3: from 0 to 30000 mm is not inside the clear length of span 3 of 7175 mm",
+        "stirrups, zone 4: span '4' does not exist; write one of 1, 2, 3",
+        "stirrups, zone 5: no spacing; write for example 'spacing': '200 mm'",
+    )
+
+
+@pytest.mark.parametrize(
+    "stirrups",
+    [None, [{"span": k, "spacing": "150 mm"} for k in (1, 2, 3)]],
+    ids=["chosen", "given"],
+)
+def test_torsion_with_open_stirrups(stirrups: list[dict[str, Any]] | None) -> None:
+    """Open stirrups, chosen or given, are refused where torsion counts: span by span."""
+    matches(
+        refused_at("flexure", **EDGE, stirrups=stirrups),
+        *(f"closed_stirrups: span {k}: its torsion of" for k in (1, 2, 3)),
+    )
+    matches(
+        refused_at("flexure", **EDGE, stirrups=stirrups, closed_stirrups=True, stirrup_legs=4),
+        *(f"stirrup_legs: span {k}: its torsion of" for k in (1, 2, 3)),
+    )
+
+
+def test_torques_of_loads_that_are_not_there() -> None:
+    matches(
+        refused_at_start(**EDGE | {"torques": {"S": "2 kN.m", "Q": "2 kN.m"}}),
+        "torques: load type 'Q'; write one of D, L, L_st, S",
+    )
+    matches(
+        refused_at_start(
+            **EDGE | {"torques": {"S": "2 kN.m", "L": "3 kN.m"}}, use="equipment room"
+        ),
+        "torques: a torque by S, but the beam has no load of that type (use 'equipment room' gives "
+        "L_st); write one of D, L_st",
+        "torques: a torque by L, but",
+    )  # fmt: skip
+
+
+def test_the_simplified_method_outside_its_limits() -> None:
+    matches(
+        refused_at_start(shear_method="simplified", grade="500R", f_c="70 MPa"),
+        "shear_method: 'simplified' holds up to bars of 400 MPa, but grade '500R' has 500 MPa; "
+        "write 'general'",
+        "shear_method: 'simplified' holds up to concrete of 60 MPa, but f_c is 70 MPa",
+    )
+
+
+def test_hooks_to_the_edition_whose_rule_is_unknown() -> None:
+    """A23.3:24 changed the hook: hooks given are refused with the reason."""
+    matches(
+        refused_at("flexure", project=P24, bar_runs=[BOTTOM | {"hook_start": "90"}, TOP]),
+        "bar run 1, hook_start: hooks cannot be calculated to CSA A23.3:24, whose expression is "
+        "not known here; write straight bars",
+    )
+
+
+def test_a_frame_analysis_that_is_not_there() -> None:
+    matches(
+        refused_at_start(forces_csv="nowhere.csv", b_w="38 m"),
+        "b_w: '38 m'",
+        "forces_csv: 'nowhere.csv': no such file; write its path from the folder of the notebook",
+    )
+
+
+def test_many_faults_are_told_together() -> None:
+    """One of every kind of input, in one refusal."""
+    faults = refused_at_start(
+        spans=["7.6 m", "60 m", "7.6 m"], supports=["girder 400 mm"], b_w="380", grade="600R",
+        use="ballroom", exposure="Z", cover="-30 mm", shear_method="best", stirrup="99M",
+        carries="a wall", torsion="some", web_openings="yes", closed_stirrups="yes",
+        stirrup_legs=9, sustained="3", shape="I", fire_rating="9 h",
+    )  # fmt: skip
+    named = {fault.partition(":")[0].partition(",")[0] for fault in faults}
+    assert named >= {
+        "spans", "b_w", "grade", "use", "exposure", "cover", "shear_method", "stirrup", "carries",
+        "torsion", "web_openings", "closed_stirrups", "stirrup_legs", "sustained", "shape",
+        "fire_rating",
+    }  # fmt: skip
+    assert all("; " in fault for fault in faults)
