@@ -274,7 +274,18 @@ TORSION = (
         {"M_f": 50, "d_v": 481.5, "V_le": 178.4, "theta": 35},
         "254.782 - 50/0.4815 = 254.782 - 103.842 = 150.9",
     ),
-    W("torsion.END_SUPPORT", {"V_le": 178.4, "theta": 35}, "178.4*cot(35) = 254.8"),
+    W(
+        "torsion.END_SUPPORT",
+        {"V_f": 260, "V_s": 207.83, "p_h": 1534.8, "T_f": 28, "A_o": 111861, "theta": 35},
+        "sqrt(156.085**2 + 86.439**2)*cot(35) = 178.42*1.42815 = 254.8",
+        CHECK_10,
+    ),
+    W(
+        "torsion.END_SUPPORT",
+        {"V_f": 100, "V_s": 207.83, "p_h": 1534.8, "T_f": 28, "A_o": 111861, "theta": 35},
+        "sqrt(50**2 + 86.439**2)*cot(35) = 99.858*1.42815 = 142.6",
+        CHECK_10,
+    ),
 )
 # Interface of check no. 13: monolithic, 2-10M at 250 across a flange of 130.
 PLANE = {**C, "c_v": 1.0, "mu": 1.4}

@@ -295,7 +295,7 @@ def _record_end_force(site: Site, steps: Steps) -> None:
         steps.line(shear_bars.END_SUPPORT)
         return
     site.writers.torsion(steps, demand, side.near)
-    steps.lines(torsion.SHEAR_IN_BARS, torsion.END_SUPPORT)
+    steps.line(torsion.END_SUPPORT)
 
 
 def record_end_top(site: Site) -> None:

@@ -233,8 +233,8 @@ def end_tensions(designed: Designed, support: int) -> list[float]:
     for row, v in enumerate(V.tolist()):
         given = {"V_f": abs(v), "V_s": met.V_s, "theta": met.theta}
         if T is not None and T.T_f[row] > 0:
-            V_le = value(torsion.SHEAR_IN_BARS, T_f=T.T_f[row], p_h=T.p_h, A_o=T.A_o, **given)
-            made.append(value(torsion.END_SUPPORT, V_le=V_le, theta=met.theta))
+            given |= {"T_f": T.T_f[row], "p_h": T.p_h, "A_o": T.A_o}
+            made.append(value(torsion.END_SUPPORT, **given))
         else:
             made.append(value(shear_bars.END_SUPPORT, **given))
     return made

@@ -36,6 +36,12 @@ from lineproof.beams.continuous.summary_tables import (
     shear_rows,
     unit_word,
 )
+from lineproof.beams.continuous.summary_torsion import (
+    TITLE,
+    TORSION,
+    TORSION_WIDTHS,
+    torsion_rows,
+)
 from lineproof.beams.continuous.symbols import KINDS
 from lineproof.drawing import Figure, to_json
 from lineproof.record import Entry
@@ -80,6 +86,9 @@ def _tables(
 ) -> Iterator[tuple[str, str, list[str], Sequence[float], Iterable[Row]]]:
     yield "flexure", "Flexure: what governs", FLEXURE, FLEXURE_WIDTHS, flexure_rows(design.model)
     yield "shear", "Shear: what governs", SHEAR, SHEAR_WIDTHS, shear_rows(design)
+    turned = list(torsion_rows(design))
+    if turned:
+        yield "torsion", TITLE, TORSION, TORSION_WIDTHS, turned
     yield (
         "service", "Cracks, minimum bars, deflections", SERVICE, SERVICE_WIDTHS,
         service_rows(design.model),

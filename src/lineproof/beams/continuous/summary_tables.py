@@ -16,6 +16,7 @@ from lineproof.beams.continuous.flexure import (
 from lineproof.beams.continuous.imported_record import imported_reactions
 from lineproof.beams.continuous.model import ANALYSIS, Model
 from lineproof.beams.continuous.restraint import worst_case
+from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit, utilisation
@@ -125,6 +126,13 @@ def _moment_row(
     return Row(cells, check)
 
 
+def place_of(section: ShearSection) -> str:
+    """Say where a section of shear lies."""
+    if section.place == "station":
+        return f"span {section.span}, {section.distance / 1000:.2f} m from {section.end}"
+    return f"span {section.span}, {section.end} end"
+
+
 def shear_rows(design: Design) -> Iterator[Row]:
     """Give a row for every section of shear that is printed."""
     sheet = design.model.sheet
@@ -133,9 +141,7 @@ def shear_rows(design: Design) -> Iterator[Row]:
         check = entries.get(shear.STRENGTH.key)
         forces = ("V_f", "V_c", "V_s", "V_r")
         values = [printed(entries[n].value, "kN") if n in entries else "" for n in forces]
-        place = f"span {section.span}, {section.end} end"
-        if section.place == "station":
-            place = f"span {section.span}, {section.distance / 1000:.2f} m from {section.end}"
+        place = place_of(section)
         basis = design.stirrups.basis
         legs = "" if basis.legs == PAIR else f"{basis.legs} legs "
         spaced = f"{legs}{basis.stirrup} at {section.spacing:g}" if not section.plain else "none"

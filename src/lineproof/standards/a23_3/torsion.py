@@ -203,7 +203,7 @@ COMPRESSION_SIDE = _formula(
     basis=FROM_MEMORY,
 )
 END_SUPPORT = _formula(
-    "F_le = V_le*cot(theta)",
+    "F_le = sqrt((V_f - 0.5*min(V_s, V_f))**2 + (0.45*p_h*T_f/(2*A_o))**2)*cot(theta)",
     clause="11.3.10.6",
     title="Force in the bottom bars at the inner edge of the bearing, with torsion",
     basis=FROM_MEMORY,
