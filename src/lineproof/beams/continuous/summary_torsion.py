@@ -15,9 +15,7 @@ TORSION = [
     "a_t, mm2/m", "Legs, mm2/m", "Stirrups", "Section", "Bars",
 ]  # fmt: skip
 TORSION_WIDTHS = (27.0, 28.0, 12.0, 15.0, 13.0, 13.0, 13.0, 13.0, 13.0, 13.0, 13.0)
-TITLE = (
-    "Torsion with shear: it counts from a quarter of T_cr; closed stirrups need a_v + 2 a_t of legs"
-)
+TITLE = "Torsion with shear: from where it counts, closed stirrups, section and bars"
 _PER_METRE = 1000.0
 _QUARTER = 4.0
 

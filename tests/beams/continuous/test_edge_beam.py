@@ -1,0 +1,261 @@
+"""The edge beam of the notebooks: torsion from the slab, with moment and shear, in whole flow."""
+
+from __future__ import annotations
+
+import ast
+import json
+import math
+from pathlib import Path
+from typing import Any
+
+import numpy as np
+import pytest
+
+from lineproof import beams
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.resistance_cover import covered
+from lineproof.beams.continuous.resistance_demand import end_tension, end_torsion
+from lineproof.beams.continuous.shear_sections import ShearSection
+from lineproof.errors import UserError
+from lineproof.record import Entry, Record, recompute
+from lineproof.sheet import Sheet
+
+from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
+from .flow import MIXED, PROJECT, start
+
+NOTEBOOK = Path(__file__).parents[3] / "calcs" / "edge-beam.ipynb"
+CALLS = (
+    "loads", "spans", "analysis", "flexure", "shear", "deflections", "anchorage", "schedule",
+    "summary",
+)  # fmt: skip
+TURNED: dict[str, Any] = {
+    "torques": {"D": "15 kN.m"}, "torsion": "equilibrium", "closed_stirrups": True,
+}  # fmt: skip
+
+
+def inputs_of(notebook: Path) -> dict[str, Any]:
+    """Return the inputs that the cell to be edited sets."""
+    cells = json.loads(notebook.read_text())["cells"]
+    sources = ("".join(cell["source"]) for cell in cells)
+    cell = next(text for text in sources if text.startswith("# Edit here"))
+    made = {}
+    for statement in ast.parse(cell).body:
+        assert isinstance(statement, ast.Assign)
+        (target,) = statement.targets
+        assert isinstance(target, ast.Name)
+        made[target.id] = ast.literal_eval(statement.value)
+    return made
+
+
+def make(beam: beams.ContinuousBeam) -> tuple[beams.ContinuousBeam, Design, Record]:
+    """Return a beam with all its chapters recorded, its design and its record."""
+    for call in CALLS:
+        getattr(beam, call)()
+    return beam, beam.design, beam.sheet.close()
+
+
+def edge(**changes: Any) -> beams.ContinuousBeam:
+    """Start the beam of the notebook with some inputs changed."""
+    sheet = Sheet("B12", "Edge beam", project=PROJECT)
+    return beams.continuous_beam(sheet, **(inputs_of(NOTEBOOK) | changes))
+
+
+@pytest.fixture(scope="module")
+def edge_beam() -> tuple[beams.ContinuousBeam, Design, Record]:
+    return make(edge())
+
+
+@pytest.fixture(scope="module")
+def three_spans() -> tuple[beams.ContinuousBeam, Design, Record]:
+    """The three-span beam with 15 kN.m per metre of torsion that equilibrium needs."""
+    return make(start(**TURNED))
+
+
+def failing(sheet: Sheet) -> list[str]:
+    """Return the checks that do not hold."""
+    return [e.id for part in sheet.parts for e in part.entries.values() if _fails(e)]
+
+
+def _fails(entry: Entry) -> bool:
+    return entry.kind == "check" and not entry
+
+
+def turned_sections(design: Design) -> list[ShearSection]:
+    """Return the printed sections at which torsion counts."""
+    return [s for row in design.stirrups.sections for s in row if s.counts]
+
+
+@pytest.mark.parametrize("name", ["edge_beam", "three_spans"])
+def test_every_check_holds_and_every_line_is_followed(
+    name: str, request: pytest.FixtureRequest
+) -> None:
+    """All checks hold; a pocket calculator and a recomputation find every printed number."""
+    beam, _, record = request.getfixturevalue(name)
+    assert failing(beam.sheet) == []
+    assert list(faults(record.data)) == []
+    assert recompute(record) == []
+
+
+@pytest.mark.parametrize("name", ["edge_beam", "three_spans"])
+def test_recorded_is_what_was_chosen_by(name: str, request: pytest.FixtureRequest) -> None:
+    """Every number of a section with torsion on the sheet is that of the choice, to 1e-9."""
+    beam, design, _ = request.getfixturevalue(name)
+    found = turned_sections(design)
+    assert found
+    for section in found:
+        entries = beam.sheet.entries_of(section.key)
+        for symbol in ("d_v", "M_f", "V_f", "a_t", "theta", "V_c", "V_s", "V_r", "F_lt", "F_lc"):
+            scale = section.values["V_f"] * section.values["d_v"] if symbol == "M_f" else 0.0
+            expected = section.values[symbol]
+            apart = abs(entries[symbol].value - expected)
+            assert apart <= 1e-9 * max(abs(expected), scale), (section.key, symbol)
+        T_f = entries.get("T_fr", entries["T_f"])
+        assert T_f.value == pytest.approx(section.values["T_f"], rel=1e-9)
+        assert entries["A_s"].value == pytest.approx(section.A_s, rel=1e-9)
+        assert entries["A_sp"].value == pytest.approx(section.A_sp, rel=1e-9)
+
+
+@pytest.mark.parametrize("name", ["edge_beam", "three_spans"])
+def test_bars_carry_torsion_at_every_station(name: str, request: pytest.FixtureRequest) -> None:
+    """Every case at every 50 mm: the bars that count are no less than 11.3.10.6 needs."""
+    _, design, _ = request.getfixturevalue(name)
+    turned = 0
+    for check in design.stirrups.checks:
+        for needed, area in check.bar_areas():
+            assert np.all(needed <= area)
+            turned += int((needed > 0).sum())
+    assert turned > 100
+    assert covered(design.designed, design.runs).gaps == ()
+
+
+def test_force_in_the_bars_with_torsion_by_hand(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """Span 1 at 2.575 m from support 1, 5-15M below, 10M closed at 175 mm, 1.25 D + 1.5 L.
+
+    d = 620 - 40 - 11.3 - 8 = 560.7, d_v = 0.9 d = 504.63 mm; between the stirrup's centre lines
+    380 - 80 - 11.3 = 288.7 and 620 - 80 - 11.3 = 528.7 mm: A_oh = 152 636 mm2, p_h = 1634.8 mm,
+    A_o = 0.85 A_oh = 129 740 mm2. t_f = 1.25 x 5.5 + 1.5 x 5.0 = 14.375 kN.m/m, x_n = 2.575 -
+    0.225 = 2.35 m, l_n/2 = 3.575 m: T_f = 14.375 x 1.225 = 17.609 kN.m, below 0.67 T_cr. With
+    M_f = 128.808 kN.m and V_f = 28.534 kN (statics of the case, tested apart):
+    V_fe = sqrt(28.534^2 + (0.9 x 1634.8 x 17.609e6/259 481/1000)^2) = sqrt(814.2 + 99.850^2)
+    = 103.85 kN; eps_x = (128 808/504.63 + 103.85)e3/(2 x 200 000 x 1000) = 0.00089775;
+    theta = 29 + 7000 eps_x = 35.284 deg, cot 1.41316; a_t = 17.609e6/(259 481 x 340 x 1.41316) =
+    0.14124 mm2/mm; legs left for shear 200 - 2 x 0.14124 x 175 = 150.57 mm2; V_s = 0.85 x 150.57 x
+    400 x 504.63 x 1.41316/175 = 208.61 kN, half of it above V_f; V_le = 0.45 x 1634.8 x
+    17.609e6/259 481 = 49.925 kN; F_lt = 255.25 + 49.925 x 1.41316 = 325.8 kN; the bars carry
+    0.85 x 1000 x 400 = 340 kN. Clauses 11.3.10.3 to .6 and 11.3.6.4.
+    """
+    beam, design, _ = edge_beam
+    worst = max(turned_sections(design), key=lambda section: section.use["tension"])
+    assert (worst.span, worst.end, worst.distance, worst.spacing) == (1, "left", 2575.0, 175.0)
+    entries = beam.sheet.entries_of(worst.key)
+    M, V = entries["M_f"].value, entries["V_f"].value
+    assert pytest.approx(128.808e6, rel=1e-5) == M
+    assert pytest.approx(28.534e3, rel=1e-4) == V
+    T = (1.25 * 5.5 + 1.5 * 5.0) * (7.15 / 2 - 2.35) * 1e6
+    p_h, A_o = 2 * (288.7 + 528.7), 0.85 * 288.7 * 528.7
+    eps_x = (M / 504.63 + math.hypot(V, 0.9 * p_h * T / (2 * A_o))) / (2 * 200_000 * 1000)
+    cot = 1 / math.tan(math.radians(29 + 7000 * eps_x))
+    a_t = T / (2 * A_o * 0.85 * 400 * cot)
+    V_s = 0.85 * (200 - 2 * a_t * 175) * 400 * 504.63 * cot / 175
+    F_lt = M / 504.63 + math.hypot(max(V - V_s / 2, 0), 0.45 * p_h * T / (2 * A_o)) * cot
+    assert pytest.approx(325.8e3, abs=50) == F_lt
+    assert entries["a_t"].value == pytest.approx(a_t, rel=1e-9)
+    assert entries["V_s"].value == pytest.approx(V_s, rel=1e-9)
+    assert entries["F_lt"].value == pytest.approx(F_lt, rel=1e-9)
+    check = entries["bars-tension-side"]
+    assert check.value == (pytest.approx(F_lt, rel=1e-9), pytest.approx(340e3))
+
+
+def test_bottom_bars_run_through_and_no_fewer_do(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """All bottom bars run into both supports; one bar less in span 1 does not carry torsion."""
+    beam, design, _ = edge_beam
+    for span in (1, 2):
+        start_, end = design.outline.faces(span)
+        layers = beam.design.designed.bars.bottom[span - 1]
+        there = [r for r in design.runs if r.face == "bottom" and r.start <= start_]
+        through = [r for r in there if r.end >= end]
+        assert sum(run.number for run in through) >= sum(layer.number for layer in layers)
+    note = beam.sheet.entry("torsion-1/bars-with-torsion")
+    assert "run from support to support" in note.source.text
+    assert "by the moments alone" in note.source.text
+    layer = design.designed.bars.bottom[0][0]
+    fewer = edge(bottom_bars=[f"{layer.number - 1}-{layer.size}", None])
+    for call in CALLS[:5]:
+        getattr(fewer, call)()
+    assert any(name.endswith("/bars-tension-side") for name in failing(fewer.sheet))
+
+
+def test_given_bars_stay_and_fail() -> None:
+    """Bars that the designer gave are not changed: where torsion needs more their check fails."""
+    beam = start(**(TURNED | {"bottom_bars": ["5-20M", None, None]}))
+    for call in CALLS[:5]:
+        getattr(beam, call)()
+    (layer,) = beam.design.designed.bars.bottom[0]
+    assert (layer.number, layer.size) == (5, "20M")
+    failed = [name for name in failing(beam.sheet) if "bars-" in name]
+    assert failed
+    assert all(name.startswith("shear-1-") for name in failed)
+
+
+@pytest.mark.parametrize("support", [1, 4])
+def test_torsion_at_the_bearing(
+    three_spans: tuple[beams.ContinuousBeam, Design, Record], support: int
+) -> None:
+    """F_le at an end support, by hand from V_f, V_s, theta and T_f of its part (11.3.10.6).
+
+    T_f at the face is 1.25 x 15 x l_n/2 = 18.75 x 3.5875 = 67.27 kN.m, or 0.9 D or 1.4 D of it.
+    """
+    beam, design, _ = three_spans
+    entries = beam.sheet.entries_of(f"anchorage-end-{support}-bottom")
+    factor = entries["t_f"].value / 15e3
+    assert factor in (pytest.approx(1.25), pytest.approx(1.4), pytest.approx(0.9))
+    l_n = 7600 - 200 - 225
+    assert entries["T_f"].value == pytest.approx(factor * 15e3 * l_n / 2)
+    p_h, A_o = 2 * (308.7 + 548.7), 0.85 * 308.7 * 548.7
+    V, V_s, theta = (entries[name].value for name in ("V_f", "V_s", "theta"))
+    turned = 0.45 * p_h * entries["T_f"].value / (2 * A_o)
+    F_le = math.hypot(V - min(V_s, V) / 2, turned) / math.tan(math.radians(theta))
+    assert entries["F_le"].value == pytest.approx(F_le, rel=1e-9)
+    assert entries["F_le"].value == pytest.approx(end_tension(design.designed, support), rel=1e-9)
+    assert end_torsion(design.designed, support) is not None
+
+
+def test_cantilever_is_held_once() -> None:
+    """The torque of a cantilever passes through to its support: T = t (l_n - x)."""
+    changes = dict(MIXED) | {"torques": {"D": "6 kN.m"}, "torsion": "equilibrium"}
+    beam = start(**(changes | {"closed_stirrups": True}))
+    for call in CALLS[:5]:
+        getattr(beam, call)()
+    assert "at the face of its support only" in beam.sheet.entry("torsion-1/held").source.text
+    assert "held against turning at the faces" in beam.sheet.entry("torsion-2/held").source.text
+    entries = beam.sheet.entries_of("shear-1-right")
+    t_f, x_n = entries["t_f"].value, entries["d_v"].value
+    assert entries["T_f"].value == pytest.approx(t_f * (2000 - 225 - x_n), rel=1e-9)
+    assert [name for name in failing(beam.sheet) if name.startswith("shear-")] == []
+
+
+def test_open_stirrups_are_refused_with_what_to_write() -> None:
+    beam = start(**(TURNED | {"closed_stirrups": False}))
+    for call in CALLS[:3]:
+        getattr(beam, call)()
+    with pytest.raises(UserError, match="write closed_stirrups = True"):
+        beam.flexure()
+
+
+def test_summary_has_a_row_of_torsion_for_every_section(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """T_cr = 235 600^2/2000 x 0.38 x 0.65 x sqrt(32)/1e6 = 38.78 kN.m, its quarter 9.69 kN.m."""
+    _, design, record = edge_beam
+    table = next(e for e in record.entries.values() if e["id"] == "summary/torsion")
+    sections = [s for row in design.stirrups.sections for s in row]
+    assert len(table["rows"]) == len(sections)
+    assert {row[3] for row in table["rows"]} == {"9.69"}
+    assert 235_600**2 / 2000 * 0.38 * 0.65 * math.sqrt(32) / 4e6 == pytest.approx(9.69, abs=5e-3)
+    counting = [row for row in table["rows"] if row[4] != "0"]
+    assert len(counting) == len(turned_sections(design))
+    assert not any("FAILS" in cell for row in table["rows"] for cell in row)
