@@ -6,10 +6,13 @@ import ast
 import math
 import operator
 from collections.abc import Callable, Sequence
+from functools import lru_cache
 from typing import Any
 
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
+MOST_KEPT = 4096
+"""Functions that are kept: a beam made again asks for the same ones."""
 _BINARY: dict[str, type[ast.operator]] = {
     "+": ast.Add,
     "-": ast.Sub,
@@ -100,6 +103,11 @@ def compile_tree(tree: Tree, names: Sequence[str]) -> Callable[..., float]:
     >>> compile_tree(Binary("/", Name("a"), Number("2")), ["a"])(5.0)
     2.5
     """
+    return _compiled(tree, tuple(names))
+
+
+@lru_cache(maxsize=MOST_KEPT)
+def _compiled(tree: Tree, names: tuple[str, ...]) -> Callable[..., float]:
     arguments = ast.arguments(
         posonlyargs=[], args=[ast.arg(n) for n in names], kwonlyargs=[], kw_defaults=[], defaults=[]
     )
@@ -116,6 +124,11 @@ def compile_step(tree: Tree, names: Sequence[str]) -> Callable[[dict[str, Any]],
     line is the hot path of every design loop, and one call instead of three halves its cost.
     Raises :class:`KeyError` for a name that the scope does not hold.
     """
+    return _step(tree, tuple(names))
+
+
+@lru_cache(maxsize=MOST_KEPT)
+def _step(tree: Tree, names: tuple[str, ...]) -> Callable[[dict[str, Any]], Any]:
     fetch: list[ast.stmt] = [
         ast.Assign(
             [ast.Name(name, ast.Store())],

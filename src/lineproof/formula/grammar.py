@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import ast
 import re
+from functools import lru_cache
 
 from lineproof.errors import UserError
 from lineproof.formula.notation import check_id
@@ -15,6 +16,8 @@ from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
 LONGEST = 400
 DEEPEST = 40
+MOST_KEPT = 4096
+"""Texts whose trees are kept: a record is read, checked and printed from the same texts."""
 FUNCTIONS = {
     "sqrt": (1, 1), "cbrt": (1, 1), "abs": (1, 1), "min": (2, 9), "max": (2, 9),
     "sin": (1, 1), "cos": (1, 1), "tan": (1, 1), "cot": (1, 1),
@@ -102,6 +105,7 @@ def _number(node: ast.Constant, text: str) -> str:
     return written
 
 
+@lru_cache(maxsize=MOST_KEPT)
 def parse_line(text: str) -> tuple[str, Tree]:
     """Read ``symbol = expression`` into the symbol's id and the expression's tree."""
     left, equals, right = text.partition("=")
@@ -110,6 +114,7 @@ def parse_line(text: str) -> tuple[str, Tree]:
     return check_id(left.strip()), parse_expression(right)
 
 
+@lru_cache(maxsize=MOST_KEPT)
 def parse_criterion(text: str) -> tuple[Tree, str, Tree]:
     """Read ``expression <= expression`` (or ``<``, ``>=``, ``>``) into left, sign and right."""
     signs = _COMPARISON.findall(text)

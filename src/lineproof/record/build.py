@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
 from lineproof.errors import UserError
@@ -46,14 +46,8 @@ def build(
 ) -> dict[str, Any]:
     """Return the record of a calculation as plain data, printed strings and digest included."""
     parts = list(parts)
-    wanted: dict[int, int] = {}
-    for _ in range(MOST_PASSES):
-        builder = _Builder(notation, wanted)
-        made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
-        needed = {key: max(n, wanted.get(key, 0)) for key, n in builder.wanted.items()}
-        if needed == wanted:
-            break
-        wanted = needed
+    builder = _Builder(notation, _settled(parts))
+    made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
     entries = [entry for part in made for entry in part["entries"]]
     confirm = _to_confirm(entries, project, codes)
     return {
@@ -124,40 +118,57 @@ class PartByPart:
         known = self._made.get(id(part))
         if known is not None and known[1]["part"]["label"] == str(number):
             return known[1]
-        wanted: dict[int, int] = {}
-        for _ in range(MOST_PASSES):
-            builder = _Builder(notation, wanted, self._digits)
-            made = builder.part(part, str(number))
-            needed = {key: max(n, wanted.get(key, 0)) for key, n in builder.wanted.items()}
-            if needed == wanted:
-                break
-            wanted = needed
-        self._digits.update(builder.shown)
+        printer = _settled([part], self._digits)
+        builder = _Builder(notation, printer)
+        made = builder.part(part, str(number))
+        self._digits.update(printer.digits)
         data = {"part": made, "notation": builder.notation()}
         self._made[id(part)] = part, data  # with the part, so that its id stays its own
         return data
 
 
+def _settled(parts: Sequence[Part], digits: Mapping[int, int] | None = None) -> Printer:
+    """Print until no line asks for more digits of a value; return the printer of the last pass."""
+    entries = [entry for part in parts for entry in part.entries.values()]
+    for entry in entries:
+        _check_kinds(entry)
+    printer = Printer(digits=digits)
+    for _ in range(MOST_PASSES - 1):
+        for entry in entries:
+            _print(entry, printer)
+        settled = printer.settled()
+        printer = printer.following()
+        if settled:
+            break
+    return printer
+
+
+def _print(entry: Entry, printer: Printer) -> None:
+    """Print all numbers of an entry, in the order in which its row holds them."""
+    if entry.kind in VALUES:
+        printer.printed(entry)
+        if entry.kind == FOUND:
+            _closing(entry, printer)
+    elif entry.kind in CRITERIA:
+        printer.criterion(entry, _ratio_of(entry))
+
+
+def _closing(entry: Entry, printer: Printer) -> dict[str, Any]:
+    extra, test = entry.extra or {}, entry.source.closing
+    sides: tuple[float, float] = extra["closing_sides"]
+    holds = test.holds(*sides)
+    return printer.comparison(entry, test, extra["closing_args"], sides, holds=holds)
+
+
+def _ratio_of(entry: Entry) -> float | None:
+    return utilisation(entry) if entry.kind == CHECK else None
+
+
 class _Builder:
-    def __init__(
-        self,
-        notation: Notation,
-        wanted: Mapping[int, int] | None = None,
-        digits: Mapping[int, int] | None = None,
-    ) -> None:
+    def __init__(self, notation: Notation, printer: Printer) -> None:
         self._known = notation
         self._used: dict[str, Symbol] = {}
-        self._printer = Printer(wanted, digits)
-
-    @property
-    def shown(self) -> Mapping[int, int]:
-        """The digits that entries have shown at their own lines."""
-        return self._printer.digits
-
-    @property
-    def wanted(self) -> Mapping[int, int]:
-        """The digits that lines need of one another, for the next pass."""
-        return self._printer.used
+        self._printer = printer
 
     def notation(self) -> list[dict[str, str]]:
         fields = ("id", "base", "sub", "sup", "meaning", "unit")
@@ -170,7 +181,6 @@ class _Builder:
 
     def _entry(self, entry: Entry, label: str) -> dict[str, Any]:
         source, extra = entry.source, entry.extra or {}
-        _check_kinds(entry)
         common = {
             "id": entry.id,
             "kind": entry.kind,
@@ -226,7 +236,7 @@ class _Builder:
                 "right": sides[1] / internal_factor(test.unit),
                 "unit": test.unit,
                 "conclusion": test.yes,
-                "printed": self._printer.comparison(test, closing_args, sides, holds=holds),
+                "printed": _closing(entry, self._printer),
             }
             | ({} if test.system == "N-mm" else {"system": test.system}),
         }
@@ -234,7 +244,7 @@ class _Builder:
     def _criterion(self, entry: Entry) -> dict[str, Any]:
         test, extra = entry.source, entry.extra or {}
         holds = bool(entry)
-        ratio = utilisation(entry) if entry.kind == CHECK else None
+        ratio = _ratio_of(entry)
         row: dict[str, Any] = {
             "formula": test.text,
             "args": _arguments(test.names, entry.args),

@@ -3,13 +3,12 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping, Sequence
-from dataclasses import replace
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass, replace
 from decimal import Decimal
 from typing import Any
 
-from lineproof.formula import Criterion, Formula, Name, Number, System, Tree
-from lineproof.formula.compiled import COMPARE, PLAIN_COMPARE, compile_tree
+from lineproof.formula import Criterion, Formula, Name, Number, System
 from lineproof.quantity.digits import (
     ALL_DIGITS,
     MOST_DECIMALS,
@@ -27,6 +26,9 @@ from lineproof.quantity.digits import (
 )
 from lineproof.quantity.units import NOT_METRIC, UNITS, factor, internal_factor, system_unit
 from lineproof.record.entry import FOUND, GIVEN, LINE, LOOKUP, Entry
+from lineproof.record.truth import in_unit, true_substitution, truthful
+
+__all__ = ["Printer", "exact_decimal", "in_unit", "ratio", "utilisation"]
 
 _LONGEST_TYPED = 15
 _RESIDUAL = 0.01
@@ -49,10 +51,14 @@ def exact_decimal(entry: Entry) -> Decimal | None:
     return short if len(short.as_tuple().digits) <= longest else None
 
 
-def in_unit(value: float, unit: str, digits: int) -> str:
-    """Return an internal value printed in a unit to so many significant digits."""
-    # Divided as decimals: two floats that differ by their last bit must not become one.
-    return rounded_text(Decimal(value) / factor(unit, UNITS[unit].internal), digits)
+@dataclass(frozen=True, slots=True)
+class _Kept:
+    """What was printed of an entry, the digits it rests on, and those that it asks for."""
+
+    rests_on: tuple[int | None, ...]
+    printed: dict[str, Any]
+    digits: int | None
+    uses: tuple[tuple[Entry, int], ...]
 
 
 class Printer:
@@ -61,21 +67,81 @@ class Printer:
     A later line may need more digits of a value than its own line shows. ``wanted`` holds what a
     pass before this one found, by entry, so that a value reads the same wherever it stands;
     ``used`` holds what this pass finds; ``digits`` those that entries printed before have shown.
+    What nothing has changed for since the pass before is taken from there.
     """
 
     def __init__(
-        self, wanted: Mapping[int, int] | None = None, digits: Mapping[int, int] | None = None
+        self,
+        wanted: Mapping[int, int] | None = None,
+        digits: Mapping[int, int] | None = None,
+        kept: dict[tuple[int, str], _Kept] | None = None,
     ) -> None:
         self.digits: dict[int, int] = dict(digits or {})
+        self._begun = dict(self.digits)
         self._wanted = dict(wanted or {})
+        self._kept = {} if kept is None else kept
+        self._uses: list[tuple[Entry, int]] = []
         self.used: dict[int, int] = {}
+
+    def settled(self) -> bool:
+        """Tell whether this pass asked for nothing that it had not been told."""
+        return self._needed() == self._wanted
+
+    def following(self) -> Printer:
+        """Return the printer of another pass, told what this one asked for."""
+        return Printer(self._needed(), self._begun, self._kept)
+
+    def _needed(self) -> dict[int, int]:
+        return {key: max(n, self._wanted.get(key, 0)) for key, n in self.used.items()}
 
     def _note_use(self, entry: Entry, digits: int) -> None:
         if entry.kind in (LINE, FOUND, GIVEN):
-            self.used[id(entry)] = max(digits, self.used.get(id(entry), 0))
+            self._uses.append((entry, digits))
+
+    def _once(
+        self, entry: Entry, what: str, args: Sequence[Entry], make: Callable[[], dict[str, Any]]
+    ) -> dict[str, Any]:
+        """Print something of an entry, unless it was printed before resting on the same digits."""
+        own = id(entry)
+        rests_on = (self._wanted.get(own, 0), *(self.digits.get(id(a)) for a in args))
+        kept = self._kept.get((own, what))
+        if kept is None or kept.rests_on != rests_on:
+            self._uses = []
+            printed = make()
+            kept = _Kept(rests_on, printed, self.digits.get(own), tuple(self._uses))
+            self._kept[own, what] = kept
+        if kept.digits is not None:
+            self.digits[own] = kept.digits
+        for used, digits in kept.uses:
+            self.used[id(used)] = max(digits, self.used.get(id(used), 0))
+        return kept.printed
 
     def printed(self, entry: Entry) -> dict[str, Any]:
         """Return the printed strings of a given, lookup, line or found value."""
+        return self._once(entry, "value", entry.args, lambda: self._value(entry))
+
+    def criterion(self, entry: Entry, utilisation: float | None) -> dict[str, Any]:
+        """Return the printed strings of a decision or a check."""
+        holds = bool(entry)
+        made = self.comparison(entry, entry.source, entry.args, entry.value, holds=holds)
+        ratio = {} if utilisation is None else {"utilisation": _ratio(utilisation, holds=holds)}
+        return made | ratio
+
+    def comparison(
+        self,
+        entry: Entry,
+        test: Criterion,
+        args: Sequence[Entry],
+        sides: tuple[float, float],
+        *,
+        holds: bool,
+    ) -> dict[str, Any]:
+        """Return both sides of a comparison of an entry, as :meth:`_compared` prints them."""
+        return self._once(
+            entry, "comparison", args, lambda: self._compared(test, args, sides, holds=holds)
+        )
+
+    def _value(self, entry: Entry) -> dict[str, Any]:
         if entry.kind == GIVEN:
             made = _given(entry, self._wanted.get(id(entry), 0))
             self.digits[id(entry)] = digits_in(made["result"])
@@ -87,14 +153,7 @@ class Printer:
             made = self._line(entry)
         return made
 
-    def criterion(self, entry: Entry, utilisation: float | None) -> dict[str, Any]:
-        """Return the printed strings of a decision or a check."""
-        made = self.comparison(entry.source, entry.args, entry.value, holds=bool(entry))
-        if utilisation is not None:
-            made["utilisation"] = _ratio(utilisation, holds=bool(entry))
-        return made
-
-    def comparison(
+    def _compared(
         self, test: Criterion, args: Sequence[Entry], sides: tuple[float, float], *, holds: bool
     ) -> dict[str, Any]:
         """Return both sides printed so that the printed comparison has the recorded truth.
@@ -102,18 +161,17 @@ class Printer:
         The same goes for the substitution: both formulas of the printed arguments.
         """
         arguments = [self._argument(a) for a in args]
-        trees = (test.left, test.right)
         chosen = [
-            self._side(tree, test, args, arguments, value, other=other)
-            for tree, value, other in zip(trees, sides, reversed(sides), strict=True)
+            self._side(place, test, args, arguments, value, other=other)
+            for place, (value, other) in enumerate(zip(sides, reversed(sides), strict=True))
         ]
-        needed = _truthful(test, sides, [c.result for c in chosen], holds=holds)
+        needed = truthful(test, sides, [c.result for c in chosen], holds=holds)
         chosen = [
-            c if n == c.result else self._side(tree, test, args, arguments, value, needed=n)
-            for tree, value, c, n in zip(trees, sides, chosen, needed, strict=True)
+            c if n == c.result else self._side(place, test, args, arguments, value, needed=n)
+            for place, (value, c, n) in enumerate(zip(sides, chosen, needed, strict=True))
         ]
         shown = [max(pair) for pair in zip(*(c.args for c in chosen), strict=True)]
-        shown = _true_substitution(test, arguments, shown, holds=holds)
+        shown = true_substitution(test, arguments, shown, holds=holds)
         left, right = (in_unit(v, test.unit, n) for v, n in zip(sides, needed, strict=True))
         for arg, digits in zip(args, shown, strict=True):
             self._note_use(arg, digits)
@@ -125,7 +183,7 @@ class Printer:
 
     def _side(
         self,
-        tree: Tree,
+        place: int,
         test: Criterion,
         args: Sequence[Entry],
         arguments: Sequence[Argument],
@@ -134,6 +192,7 @@ class Printer:
         needed: int = 0,
         other: float = 0.0,
     ) -> Chosen:
+        tree = (test.left, test.right)[place]
         if isinstance(tree, Name):
             at = test.names.index(tree.id)
             exact = exact_decimal(args[at])
@@ -145,7 +204,7 @@ class Printer:
         if isinstance(tree, Number) and internal_factor(test.unit) == 1:
             return Chosen(tuple(a.digits for a in arguments), needed or digits_in(tree.text))
         scale = internal_factor(test.unit)
-        compiled = compile_tree(tree, test.names)
+        compiled = test.functions[place]
         return choose_digits(
             lambda *numbers: compiled(*numbers) / scale,
             arguments, value / scale, test.unit, max(needed, 0),
@@ -279,41 +338,6 @@ def _coherent(value: float, unit: str, target: str, digits: int) -> dict[str, st
     if target == unit or factor(unit, target) == 1 or digits <= 0:
         return None
     return {"result": in_unit(value, target, digits), "unit": target}
-
-
-def _truthful(
-    test: Criterion, sides: tuple[float, float], digits: list[int], *, holds: bool
-) -> list[int]:
-    """Return the digits of both sides at which the printed comparison has its recorded truth.
-
-    Rounded to the same digits, two numbers keep their order, so the shorter side grows first.
-    """
-    while True:
-        left, right = (in_unit(value, test.unit, n) for value, n in zip(sides, digits, strict=True))
-        printed = PLAIN_COMPARE[test.sign](Decimal(left), Decimal(right))
-        if printed == holds or min(digits) >= ALL_DIGITS:
-            return digits
-        fewest = max(min(digits), 0)
-        digits = [max(n, fewest + 1) for n in digits]
-
-
-def _true_substitution(
-    test: Criterion, arguments: Sequence[Argument], digits: list[int], *, holds: bool
-) -> list[int]:
-    """Lengthen arguments until both sides, computed from them, compare as recorded."""
-    while max(digits, default=ALL_DIGITS) < ALL_DIGITS:
-        numbers = [
-            a.exact if a.exact is not None else float(significant(a.value, n))
-            for a, n in zip(arguments, digits, strict=True)
-        ]
-        try:
-            left, right = (side(*numbers) for side in test.functions)
-            if COMPARE[test.sign](left, right) == holds:
-                break
-        except (ArithmeticError, ValueError, TypeError):
-            pass
-        digits = [n + 1 for n in digits]
-    return digits
 
 
 def _ratio(utilisation: float, *, holds: bool) -> str:

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
-from functools import lru_cache
 from typing import Any
 
 from lineproof.formula.grammar import parse_criterion, parse_line
@@ -36,19 +35,9 @@ class Chain:
         return f"{self.lead}: {chain}" if self.lead else chain
 
 
-@lru_cache(maxsize=4096)
-def _line_tree(formula: str) -> Tree:
-    return parse_line(formula)[1]
-
-
-@lru_cache(maxsize=4096)
-def _criterion_trees(formula: str) -> tuple[Tree, str, Tree]:
-    return parse_criterion(formula)
-
-
 def line_chain(entry: Entry, notation: Notation) -> Chain:
     """Return symbol = formula = substitution (= coherent result); the result stands apart."""
-    tree, printed = _line_tree(entry["formula"]), entry["printed"]
+    tree, printed = parse_line(entry["formula"])[1], entry["printed"]
     symbol = symbol_math(symbol_of(entry["symbol"], notation))
     pieces = [row([EQUALS, formula_math(tree, notation)])]
     coherent = printed.get("coherent")
@@ -69,7 +58,7 @@ def criterion_chains(entry: Entry, notation: Notation) -> tuple[Chain, ...]:
     criterion, the substitution, both values. When the criterion does not hold, the values stand
     with the opposite sign, and the criterion stands first as what was asked for.
     """
-    left, sign, right = _criterion_trees(entry["formula"])
+    left, sign, right = parse_criterion(entry["formula"])
     asked = RELATIONS[sign]
     true = asked if entry["holds"] else RELATIONS[OPPOSITE[sign]]
     simple = isinstance(left, Name | Number) and isinstance(right, Name | Number)

@@ -9,6 +9,7 @@ the top bars the largest moment is that of the half of the span, since each end 
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
@@ -95,6 +96,25 @@ def stretch_at(designed: Designed, x: float) -> ShearStretch:
     return min(met, key=lambda s: s.V_s, default=NO_SHEAR)
 
 
+def _stretches_at(designed: Designed, x: Floats) -> list[ShearStretch]:
+    """Return :func:`stretch_at` of many places at once."""
+    if not designed.shear:
+        return [NO_SHEAR] * len(x)
+    start, end, V_s = np.array([(s.start, s.end, s.V_s) for s in designed.shear]).T
+    met = (start <= x[:, None]) & (x[:, None] <= end)
+    weakest = np.where(met, V_s, np.inf).argmin(axis=1)
+    found = met[np.arange(len(x)), weakest]
+    return [
+        designed.shear[n] if there else NO_SHEAR
+        for n, there in zip(weakest.tolist(), found.tolist(), strict=True)
+    ]
+
+
+@lru_cache(maxsize=1024)
+def _cot(theta: float) -> float:
+    return float(1 / np.tan(np.radians(theta)))
+
+
 def covered_length(designed: Designed, span: int) -> tuple[float, float]:
     """Return where the bars of a span must carry: between faces, at inner supports to the axis."""
     left, right = designed.forces.beam.faces(span)
@@ -137,9 +157,9 @@ def demand_at(designed: Designed, span: int, local: Floats) -> SpanDemand:
     before = designed.forces.along(span, at, "left")[1]
     V = np.maximum(np.abs(V), np.abs(before))
     axis = designed.outline.axes[span - 1]
-    met = [stretch_at(designed, x) for x in (local + axis).tolist()]
+    met = _stretches_at(designed, local + axis)
     V_s = np.array([s.V_s for s in met])
-    cot = np.array([1 / np.tan(np.radians(s.theta)) for s in met])
+    cot = np.array([_cot(s.theta) for s in met])
     extra = np.maximum(V - 0.5 * np.minimum(V_s, V), 0.0) * cot
     inside = (local < left) | (local > right)
     bottom = _side(M, extra, inside, *_bottom(designed, span))
