@@ -196,7 +196,9 @@ def _anchored_span(bare: Designed, span: int, size: str) -> bool:
 def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choice:
     basis, spans = basis_of(model), span_numbers(model, designed, runs)
     if model.inputs.stirrups is None:
-        return choose_stirrups(designed.outline, model.forces, basis, spans)
+        return choose_stirrups(
+            designed.outline, model.forces, basis, spans, bars_given=model.inputs.bars_given
+        )
     return check_stirrups(designed.outline, model.forces, basis, spans, model.inputs.stirrups)
 
 

@@ -114,6 +114,11 @@ class ContinuousInputs:
         return self.h_f is not None
 
     @property
+    def bars_given(self) -> bool:
+        """Whether any bars are given, by section or along the beam."""
+        return self.bar_runs is not None or any((*self.bottom_bars, *self.top_bars))
+
+    @property
     def live_kind(self) -> str:
         """The load type of the live load on the floor."""
         return "L_st" if self.use in STORED else "L"

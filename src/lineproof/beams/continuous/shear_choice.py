@@ -86,10 +86,16 @@ class _Pair:
     runs: tuple[tuple[float, float] | None, ...]
 
 
-def choose_layouts(states: Sequence[SpanState]) -> tuple[SpanLayout, ...]:
-    """Return the layout of every span; raises :class:`UserError` where no stirrups can do."""
+def choose_layouts(
+    states: Sequence[SpanState], *, bars_given: bool = False
+) -> tuple[SpanLayout, ...]:
+    """Return the layout of every span; raises :class:`UserError` where no stirrups can do.
+
+    Where bars are given that are too weak for the method, the stirrups are those at the largest
+    strain it knows; the check of the strain then fails.
+    """
     refuse_open(states)
-    _refuse_hopeless(states)
+    _refuse_hopeless(states, bars_given=bars_given)
     fits = [Fitting.of(state) for state in states]
     spacings = grid(states[0].basis.d_bs)
     most = min(float(fit.widest.min()) for fit in fits)
@@ -183,9 +189,9 @@ def _short_ends(fit: Fitting, layout: SpanLayout, run: tuple[float, float]) -> t
     return wrong[0], wrong[1]
 
 
-def _refuse_hopeless(states: Sequence[SpanState]) -> None:
+def _refuse_hopeless(states: Sequence[SpanState], *, bars_given: bool) -> None:
     """Refuse spans that no stirrups help: web too small, strain out of range."""
-    faults = [fault for state in states for fault in _hopeless(state)]
+    faults = [fault for state in states for fault in _hopeless(state, bars_given=bars_given)]
     if faults:
         raise UserError(faults)
 
@@ -217,14 +223,14 @@ def _open_with_torsion(state: SpanState) -> Iterator[str]:
         yield f"stirrup_legs: {where}, but {state.basis.legs} are given; write 2 legs, closed"
 
 
-def _hopeless(state: SpanState) -> Iterator[str]:
-    worst = state.hopeless
+def _hopeless(state: SpanState, *, bars_given: bool) -> Iterator[str]:
+    worst = state.crushing if bars_given else state.hopeless
     row, column = np.unravel_index(int(worst.argmax()), worst.shape)
     if worst[row, column] <= 1:
         return
     v, span = state.v, state.numbers.span
     place = f"span {span}, {state.columns[column] / 1000:.2f} m from its left axis"
-    if v["eps_asked"][row, column] > 0.003:  # noqa: PLR2004 - 11.3.6.4
+    if v["eps_asked"][row, column] > 0.003 and not bars_given:  # noqa: PLR2004 - 11.3.6.4
         face = "bottom" if v["bottom"][row, column] else "top"
         yield (
             f"{face}_bars: {place}: the longitudinal strain leaves the range of the general "

@@ -120,10 +120,13 @@ class SpanState:
     @cached_property
     def hopeless(self) -> Floats:
         """Utilisation of what no stirrups cure: web, section with torsion, strain; by case."""
-        v = self.v
-        made: Floats = np.maximum.reduce(
-            [v["V_f"] / v["V_rmax"], v["section"], v["eps_asked"] / MOST_STRAIN]
-        )
+        made: Floats = np.maximum(self.crushing, self.v["eps_asked"] / MOST_STRAIN)
+        return made
+
+    @cached_property
+    def crushing(self) -> Floats:
+        """Utilisation of what neither stirrups nor bars cure: web, section with torsion."""
+        made: Floats = np.maximum(self.v["V_f"] / self.v["V_rmax"], self.v["section"])
         return made
 
     def utilisation(self, effective: Floats, plain: Truths) -> Floats:

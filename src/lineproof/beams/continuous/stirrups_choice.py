@@ -55,14 +55,20 @@ class Choice:
 
 
 def choose_stirrups(
-    outline: BeamOutline, forces: Forces, basis: ShearBasis, spans: Sequence[SpanNumbers]
+    outline: BeamOutline,
+    forces: Forces,
+    basis: ShearBasis,
+    spans: Sequence[SpanNumbers],
+    *,
+    bars_given: bool = False,
 ) -> Choice:
     """Choose the stirrups of a beam; raises :class:`UserError` with every reason why none can do.
 
-    The order is that of :mod:`shear_choice`.
+    The order is that of :mod:`shear_choice`. ``bars_given`` bars are not to be asked for more:
+    where they are too weak, their checks fail.
     """
     states = _states(forces, basis, spans)
-    layouts = choose_layouts(states)
+    layouts = choose_layouts(states, bars_given=bars_given)
     checks: list[SpanCheck] = []
     zones: list[StirrupZone] = []
     reasons: list[str] = []
