@@ -16,7 +16,7 @@ from lineproof.beams.continuous.bar_choice import (
     choose,
     top_trial,
 )
-from lineproof.beams.continuous.case_forces import record_forces
+from lineproof.beams.continuous.case_forces import NEAR, record_forces
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.model import GIVEN, Model
@@ -274,7 +274,8 @@ def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> No
     origin = "given" if inputs.bottom_bars[span - 1] is not None else CHOSEN
     with sheet.part(f"sag-{span}", f"Span {span}: moment in the span"):
         steps = _steps(model, span, "b_f" if inputs.slab else "b_w")
-        record_forces(steps, model, demand, _nearer(model, demand))
+        near = _nearer(model, demand)
+        record_forces(steps, model, demand, near, x=_at_face(model, demand, near))
         bars_inside(sheet, layers, stirrup=inputs.stirrup, origin=origin)
         _take(steps, _LAYERS)
         required(steps, inputs.shape)
@@ -312,6 +313,18 @@ def _take(steps: Steps, names: tuple[str, ...]) -> None:
 def _nearer(model: Model, demand: Demand) -> End:
     half = model.lengths[demand.span - 1].value / 2
     return "left" if demand.x <= half * (1 + 1e-9) else "right"
+
+
+def _at_face(model: Model, demand: Demand, near: End) -> Entry | None:
+    """Record the distance of the near face, if the largest moment of the span stands there.
+
+    Beside a span that is loaded far more, the shear is nowhere zero between the faces.
+    """
+    start, end = model.forces.beam.faces(demand.span)
+    if model.imported is not None or abs(demand.x - (start if near == "left" else end)) > NEAR:
+        return None
+    support = demand.span if near == "left" else demand.span + 1
+    return model.sheet.line(analysis.TO_FACE, b_sn=model.sheet.entry(f"{GIVEN}/b_s{support}"))
 
 
 def record_hog(model: Model, support: int, top: TopBars | None, pair: CodePair) -> None:
