@@ -168,6 +168,19 @@ def test_force_in_the_bars_with_torsion_by_hand(
     assert check.value == (pytest.approx(F_lt, rel=1e-9), pytest.approx(340e3))
 
 
+def test_inside_a_support_the_moment_of_its_face_counts(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """The top bars are used most inside support 2: M_f there is the larger of both faces."""
+    beam, design, _ = edge_beam
+    entries = beam.sheet.entries_of("coverage-top")
+    forces = design.model.forces
+    assert "inside the support" in entries["inside"].source.text
+    assert entries["x_st"].value == 225
+    most = max(-forces.hog(2, "left").M, -forces.hog(2, "right").M)
+    assert entries["M_f"].value == pytest.approx(most, rel=1e-9)
+
+
 def test_bottom_bars_run_through_and_no_fewer_do(
     edge_beam: tuple[beams.ContinuousBeam, Design, Record],
 ) -> None:

@@ -129,7 +129,7 @@ def _record_nothing(writers: Writers, station: Station, title: str) -> None:
             title="Gap",
         )
         steps = begin(writers, sheet, station.span, face)
-        x = sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+        x = _record_place(writers, station, near, t)
         writers.forces(steps, _demand(writers, station, tension=False), near, x)
         steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
         steps.check(flexure.STRENGTH)
