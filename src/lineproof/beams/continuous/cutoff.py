@@ -33,6 +33,7 @@ from lineproof.beams.continuous.resistance_demand import (
     Whole,
     demand_of,
     stretch_at,
+    stretches_at,
 )
 from lineproof.standards.a23_3 import cutoff as clause
 
@@ -277,9 +278,9 @@ def zones_at(
     M_f = (M if face == "bottom" else -M).max(axis=0)
     V_f = np.abs(V).max(axis=0)
     made: list[Zone] = []
-    for t, moment, shear in zip(places, M_f.tolist(), V_f.tolist(), strict=True):
-        V_r = stretch_at(designed, along(designed, span, near, t)).V_r
-        made.append(_zone(designed, face, span, (moment, shear, V_r), continuing))
+    met = stretches_at(designed, np.array([along(designed, span, near, t) for t in places]))
+    for stretch, moment, shear in zip(met, M_f.tolist(), V_f.tolist(), strict=True):
+        made.append(_zone(designed, face, span, (moment, shear, stretch.V_r), continuing))
     return made
 
 

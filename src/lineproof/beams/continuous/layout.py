@@ -8,6 +8,8 @@ k + 1. A cantilever is an end span whose outer support is ``free``.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import lru_cache
+from itertools import accumulate
 from typing import Literal
 
 from lineproof.beams.analysis.model import SupportKind
@@ -34,6 +36,11 @@ class BuiltSupport:
         return self.width / 2
 
 
+@lru_cache(maxsize=1024)
+def _axes(lengths: tuple[float, ...]) -> tuple[float, ...]:
+    return tuple(accumulate(lengths, initial=0.0))
+
+
 @dataclass(frozen=True, slots=True)
 class BeamOutline:
     """The concrete of a beam: one web width, a depth a span; ``h_f`` is 0 without a slab.
@@ -54,10 +61,7 @@ class BeamOutline:
     @property
     def axes(self) -> tuple[float, ...]:
         """Distances of the support axes from the axis of support 1."""
-        axes = [0.0]
-        for length in self.lengths:
-            axes.append(axes[-1] + length)
-        return tuple(axes)
+        return _axes(self.lengths)
 
     def faces(self, span: int) -> tuple[float, float]:
         """Return where the clear length of a span starts and ends, along the beam."""

@@ -96,7 +96,7 @@ def stretch_at(designed: Designed, x: float) -> ShearStretch:
     return min(met, key=lambda s: s.V_s, default=NO_SHEAR)
 
 
-def _stretches_at(designed: Designed, x: Floats) -> list[ShearStretch]:
+def stretches_at(designed: Designed, x: Floats) -> list[ShearStretch]:
     """Return :func:`stretch_at` of many places at once."""
     if not designed.shear:
         return [NO_SHEAR] * len(x)
@@ -157,7 +157,7 @@ def demand_at(designed: Designed, span: int, local: Floats) -> SpanDemand:
     before = designed.forces.along(span, at, "left")[1]
     V = np.maximum(np.abs(V), np.abs(before))
     axis = designed.outline.axes[span - 1]
-    met = _stretches_at(designed, local + axis)
+    met = stretches_at(designed, local + axis)
     V_s = np.array([s.V_s for s in met])
     cot = np.array([_cot(s.theta) for s in met])
     extra = np.maximum(V - 0.5 * np.minimum(V_s, V), 0.0) * cot

@@ -94,7 +94,10 @@ def bars_over(
 ) -> tuple[BarsOver, ...]:
     """Return the bars of a face that count along a span, stretch by stretch."""
     left, right = designed.outline.axes[span - 1 : span + 1]
-    own = [bars for bars in standing if bars.run.face == face]
+    own = [
+        bars for bars in standing
+        if bars.run.face == face and bars.run.start < right and bars.run.end > left
+    ]  # fmt: skip
     cuts = {left, right, (left + right) / 2, *_at_d_v(designed, span)}
     for bars in own:
         cuts |= {x for x in _marks(bars) if left < x < right}
