@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.forces import End
@@ -17,9 +17,13 @@ from lineproof.beams.continuous.groups import (
 )
 from lineproof.beams.continuous.model import Model, SingleLoad
 from lineproof.beams.continuous.symbols import KINDS, code, required, stated
+from lineproof.formula.grammar import LONGEST
 from lineproof.record import Entry
 
 Scopes = Mapping[Group, Mapping[str, Entry]]
+
+PIECE = 12
+"""Terms of a sum in one line, where all are too many for one."""
 
 
 def record_reactions(model: Model, scopes: Scopes) -> None:
@@ -85,12 +89,37 @@ def _check_equilibrium(
         loads += [f"{uniform}*l_{span}"] if uniform else []
         loads += [_size(load) for load in single_of(model, group, span)]
     total = " + ".join(loads)
-    text = f"abs({' + '.join(r.symbol for r in reactions)} - ({total})) <= 0.001*({total})"
+    up = " + ".join(r.symbol for r in reactions)
+    bound = named(scope, total)
+    if len(_equilibrium(up, total)) > LONGEST:
+        up = _summed(model, f"R_p{{}}{group.code}", up, f"Reactions, {where(group)}", {})
+        total = _summed(model, f"W_p{{}}{group.code}", total, f"Loads, {where(group)}", bound)
+        bound = {}
     test = required(
-        text, "kN", title=f"Equilibrium, {where(group)}", yes="The reactions balance the loads.",
-        key=f"equilibrium-{group.code}",
+        _equilibrium(up, total), "kN", title=f"Equilibrium, {where(group)}",
+        yes="The reactions balance the loads.", key=f"equilibrium-{group.code}",
     )  # fmt: skip
-    model.sheet.check(test, **named(scope, total))
+    model.sheet.check(test, **bound)
+
+
+def _equilibrium(up: str, total: str) -> str:
+    return f"abs({up} - ({total})) <= 0.001*({total})"
+
+
+def _summed(model: Model, symbol: str, total: str, title: str, scope: Mapping[str, Entry]) -> str:
+    """Record a long sum in pieces, each a line; return the sum of the pieces."""
+    pieces = []
+    for number, terms in enumerate(_batched(total.split(" + "), PIECE), 1):
+        text = f"{symbol.format(number)} = {' + '.join(terms)}"
+        model.sheet.line(stated(text, title=f"{title}, sum {number}"), **named(scope, text))
+        pieces.append(symbol.format(number))
+    return " + ".join(pieces)
+
+
+def _batched(items: Sequence[str], size: int) -> Iterator[Sequence[str]]:
+    """Give the items in runs of at most ``size``."""
+    for start in range(0, len(items), size):
+        yield items[start : start + size]
 
 
 def _largest(model: Model, kind: str, scopes: Scopes, support: int) -> None:
