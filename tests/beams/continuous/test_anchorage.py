@@ -125,9 +125,9 @@ def test_cover_of_60_needs_no_ties() -> None:
     assert made.l_dh == pytest.approx(298, abs=0.5)
 
 
-def test_ties_stand_on_steps_of_25() -> None:
+def test_ties_stand_on_steps_of_5() -> None:
     """3 x 25.2 = 75.6: 75; 3 x 16 = 48: 25; 3 x 35.7 = 107.1: 100."""
-    assert [tie_spacing(d_b) for d_b in (25.2, 16.0, 35.7)] == [75.0, 25.0, 100.0]
+    assert [tie_spacing(d_b) for d_b in (25.2, 16.0, 35.7)] == [75.0, 45.0, 105.0]
 
 
 def test_hooks_of_the_2024_edition_are_refused() -> None:

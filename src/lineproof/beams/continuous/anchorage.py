@@ -18,7 +18,7 @@ TOP_ROW, OTHER_ROW = "more than 300 mm of fresh concrete below", "other"
 COVERED_ROW, UNCOVERED_ROW = "side cover 60 mm and tail cover 50 mm or more", "less"
 TIED_ROW, UNTIED_ROW = "ties at 3 bar diameters or closer", "none"
 LEAST_HOOK_COVER = 60.0
-TIE_STEP = 25.0
+TIE_STEP = 5.0
 
 
 def value(formula: Formula, **given: float) -> float:
@@ -234,7 +234,7 @@ def hook_at(designed: Designed, support: int, size: str) -> HookLength:
 
 
 def tie_spacing(d_b: float) -> float:
-    """Return the spacing of ties around hooks: three bar diameters, down to a step of 25 mm."""
+    """Return the spacing of ties around hooks: three bar diameters, down to a step of 5 mm."""
     return max(TIE_STEP, 3 * d_b // TIE_STEP * TIE_STEP)
 
 
