@@ -1,0 +1,153 @@
+"""Bars and stirrups given are checked as they stand; nothing half-designed closes."""
+
+from __future__ import annotations
+
+import json
+from collections.abc import Mapping
+from typing import Any
+
+import pytest
+from tests.beams.pocket import faults
+
+from lineproof.beams.continuous import beam as beam_module
+from lineproof.beams.continuous.detailing_record import record_detailing
+from lineproof.beams.continuous.resistance_cover import covered
+from lineproof.errors import UserError
+from lineproof.record import Record, recompute
+
+from .flow import CALLS, record_of, run, start
+
+BOTTOM = {"face": "bottom", "bars": "4-25M", "start": "-0.15 m", "end": "24.55 m"}
+TOP = {"face": "top", "bars": "5-25M", "start": "-0.15 m", "end": "24.55 m"}
+TIGHT = [{"span": k, "spacing": "100 mm"} for k in (1, 2, 3)]
+"""Stirrups that are enough everywhere."""
+WEAK: Mapping[str, tuple[Mapping[str, Any], set[str]]] = {
+    "bottom bars": (
+        {"bottom_bars": "2-15M"}, {"sag-1/strength", "sag-2/strength", "coverage-bottom/strength"},
+    ),
+    "top bars": (
+        {"top_bars": "2-15M"},
+        {"hog-2-left/strength", "hog-3-right/strength", "coverage-top/strength"},
+    ),
+    "both": ({"bottom_bars": "2-15M", "top_bars": "2-15M"}, {"sag-2/strength"}),
+    "bars along the beam": (
+        {"bar_runs": [BOTTOM | {"bars": "2-15M"}, TOP | {"bars": "2-15M"}]},
+        {"sag-2/strength", "coverage-bottom/strength", "coverage-top/strength"},
+    ),
+    "bars along the beam, stirrups": (
+        {"bar_runs": [BOTTOM | {"bars": "2-15M"}, TOP | {"bars": "2-15M"}], "stirrups": TIGHT},
+        {"sag-2/strength", "coverage-bottom/strength", "coverage-top/strength"},
+    ),
+    "wide stirrups": (
+        {"stirrups": [{"span": k, "spacing": "500 mm"} for k in (1, 2, 3)]},
+        {"shear-1-right/stirrup-spacing", "shear-2-left/stirrup-spacing"},
+    ),
+    "no stirrups": ({"stirrups": []}, {"shear-1-right/shear-strength"}),
+    "no stirrups in one span": (
+        {"stirrups": [row for row in TIGHT if row["span"] != 2]}, {"shear-2-left/shear-strength"},
+    ),
+}  # fmt: skip
+
+
+@pytest.mark.parametrize("name", WEAK)
+def test_what_is_given_too_weak_fails(name: str) -> None:
+    """A failing check, not an error; the record closes, says FAILS, and can be redone."""
+    changes, wanted = WEAK[name]
+    record = record_of(**changes)
+    assert wanted <= set(record.failed)
+    assert recompute(Record.from_text(record.to_text())) == []
+    assert list(faults(record.data)) == []
+    summary = [part for part in record.data["parts"] if part["key"] == "summary"]
+    assert "FAILS" in json.dumps(summary)
+
+
+def test_what_is_given_strong_enough_holds() -> None:
+    """The same beam with bars and stirrups of its own proposal given: nothing fails."""
+    record = record_of(stirrups=TIGHT)
+    assert record.failed == []
+    assert "FAILS" not in json.dumps(record.data["parts"])
+
+
+def test_bars_given_are_not_changed() -> None:
+    """5-20M below span 2, 3-30M above support 2 stay what they are; the others are chosen."""
+    beam = start(bottom_bars=[None, "5-20M", None], top_bars=[None, "3-30M", None, None])
+    run(beam)
+    entry = beam.sheet.entry
+    assert entry("sag-2/A_s").value == 1500
+    assert entry("hog-2-left/n_t").value == 3
+    assert entry("hog-2-left/A_b").value == 700
+    assert not any(key.startswith("sag-1") for key in beam.sheet.close().failed)
+
+
+def test_runs_given_stay_as_they_are() -> None:
+    beam = start(bar_runs=[BOTTOM, TOP])
+    run(beam)
+    made = [(r.face, r.number, r.size, r.start, r.end) for r in beam.design.runs]
+    assert made == [("bottom", 4, "25M", -150, 24550), ("top", 5, "25M", -150, 24550)]
+
+
+@pytest.mark.parametrize("call", CALLS[3:])
+def test_a_part_that_could_not_be_computed_stops_the_package(
+    call: str, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """A chapter that stops, before or after its parts, keeps the sheet from closing."""
+    function = {
+        "flexure": "record_cover", "shear": "record_shear", "deflections": "record_deflections",
+        "anchorage": "record_anchorage", "schedule": "record_schedule",
+        "summary": "record_summary",
+    }[call]  # fmt: skip
+    whole = getattr(beam_module, function)
+    for late in (False, True):
+        beam = start()
+        run(beam, CALLS[: CALLS.index(call)])
+
+        def stop(*args: Any, whole: Any = whole, late: bool = late) -> None:
+            if late:
+                whole(*args)
+            raise UserError("nothing can be computed here")
+
+        with monkeypatch.context() as patch:
+            patch.setattr(beam_module, function, stop)
+            with pytest.raises(UserError, match="nothing can be computed here"):
+                getattr(beam, call)()
+        for later in CALLS[CALLS.index(call) + 1 :]:
+            if later in ("schedule", "summary"):
+                with pytest.raises(UserError, match=r"run beam\.\w+\(\) first"):
+                    getattr(beam, later)()
+        with pytest.raises(UserError, match=rf"beam\.{call}\(\)"):
+            beam.sheet.close()
+        run(beam, CALLS[CALLS.index(call) :])
+        assert beam.sheet.close().failed == []
+
+
+def test_a_part_that_breaks_off_stops_the_package(monkeypatch: pytest.MonkeyPatch) -> None:
+    """A part with half of its lines is not read by others, and the sheet does not close."""
+    beam = start()
+    run(beam, CALLS[:3])
+    with monkeypatch.context() as patch:
+        patch.setattr("lineproof.beams.continuous.flexure.record_yield", None)
+        with pytest.raises(TypeError):
+            beam.flexure()
+    for call in ("shear", "deflections", "anchorage", "schedule", "summary"):
+        with pytest.raises(UserError, match=r"run beam\.flexure\(\) first"):
+            getattr(beam, call)()
+    with pytest.raises(UserError, match="stopped with an error"):
+        beam.sheet.close()
+
+
+def test_a_proposal_that_does_not_cover_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:
+    """Bars chosen here that leave a gap are no proposal: refused with the gap, not printed."""
+
+    def with_a_gap(writers: Any, runs: Any) -> Any:
+        record_detailing(writers, runs)
+        shorter = [r for r in runs if r.serves != "span 2"]
+        return covered(writers.designed, shorter)
+
+    beam = start()
+    run(beam, CALLS[: CALLS.index("anchorage")])
+    with monkeypatch.context() as patch:
+        patch.setattr("lineproof.beams.continuous.anchorage_chapter.record_detailing", with_a_gap)
+        with pytest.raises(UserError, match="bars: bottom bars, span 2: not enough from"):
+            beam.anchorage()
+    with pytest.raises(UserError, match=r"beam\.anchorage\(\) stopped with an error"):
+        beam.sheet.close()
