@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping
 from contextlib import contextmanager
 from typing import Any, NoReturn
 
@@ -26,6 +26,7 @@ class Parts:
         self._stopped: dict[str, str] = {}
         self._stopped_calls: dict[str, None] = {}
         self._chapter: dict[str, None] | None = None
+        self._closing: Callable[[Part], None] | None = None
         self._part: Part | None = None
         self._scope_of_part: dict[str, Any] = {}
 
@@ -46,6 +47,8 @@ class Parts:
         self._part, self._scope_of_part = part, {}
         try:
             yield part
+            if self._closing is not None:
+                self._closing(part)
             self._keep_apart(part)
         except BaseException:
             self._stopped[key] = title
@@ -94,21 +97,22 @@ class Parts:
             raise UserError(faults)
 
     @contextmanager
-    def chapter(self, call: str) -> Iterator[None]:
+    def chapter(self, call: str, closing: Callable[[Part], None] | None = None) -> Iterator[None]:
         """Let every part opened inside belong to one call, whatever parts it comes to make.
 
-        Parts that the call made before and does not make now are forgotten.
+        Parts that the call made before and does not make now are forgotten. ``closing`` is called
+        with every part before it closes, and may record in it.
         """
         if self._chapter is not None:
             raise UserError(f"{call} was called inside a chapter; call it by itself")
         made: dict[str, None] = {}
-        self._chapter = made
+        self._chapter, self._closing = made, closing
         self._stopped_calls[call] = None
         try:
             yield
             del self._stopped_calls[call]
         finally:
-            self._chapter = None
+            self._chapter = self._closing = None
             self._expect_of(call, made)
 
     def _expect_of(self, call: str, made: Mapping[str, None]) -> None:

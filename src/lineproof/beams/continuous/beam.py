@@ -12,6 +12,7 @@ from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.anchorage_chapter import COVERAGE, record_anchorage
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
+from lineproof.beams.continuous.cures_flow import failing, record_cures
 from lineproof.beams.continuous.deflections import (
     SERVICE,
     record_deflections,
@@ -35,6 +36,7 @@ from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
 from lineproof.beams.floor_beam import prepare
 from lineproof.quantity import QuantityInput
+from lineproof.record import Part
 from lineproof.sheet import Sheet
 from lineproof.standards.codes import CodePair
 
@@ -84,6 +86,11 @@ class ContinuousBeam:
             self._last = key, design_of(self.model, self.pair)
         return replace(self._last[1], model=self.model)
 
+    def _cure(self, part: Part) -> None:
+        """Record in a part that is about to close what would cure the checks that fail in it."""
+        if failing(part):
+            record_cures(self.model, part)
+
     def loads(self) -> None:
         """Record the columns that hold the beam and the load take-down."""
         with self.sheet.chapter(LOADS_CALL):
@@ -115,7 +122,7 @@ class ContinuousBeam:
         design = self.design
         sizes = [layer.size for chosen in design.bottom.values() for layer in layers_of(chosen)]
         sizes += [top_of(chosen).web.size for chosen in design.top.values()]
-        with self.sheet.chapter(FLEXURE_CALL):
+        with self.sheet.chapter(FLEXURE_CALL, closing=self._cure):
             record_cover(self.sheet, self.inputs, sizes)
             for span, chosen in design.bottom.items():
                 flexure.record_sag(design.model, span, layers_of(chosen), self.pair)
@@ -127,20 +134,20 @@ class ContinuousBeam:
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""
         self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
-        with self.sheet.chapter(SHEAR_CALL):
+        with self.sheet.chapter(SHEAR_CALL, closing=self._cure):
             record_shear(self.design)
 
     def deflections(self) -> None:
         """Record the deflections of every span."""
         refuse_deflections(self.inputs)
         self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
-        with self.sheet.chapter(DEFLECTIONS_CALL):
+        with self.sheet.chapter(DEFLECTIONS_CALL, closing=self._cure):
             record_deflections(self.model)
 
     def anchorage(self) -> None:
         """Record development, hooks, cut-off points, laps, and the cover of all moments by bars."""
         self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
-        with self.sheet.chapter(ANCHORAGE_CALL):
+        with self.sheet.chapter(ANCHORAGE_CALL, closing=self._cure):
             record_anchorage(self.design)
 
     def schedule(self) -> None:

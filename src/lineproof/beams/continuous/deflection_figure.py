@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import replace
 
 from lineproof.beams.continuous.deflection import (
@@ -11,7 +12,13 @@ from lineproof.beams.continuous.deflection import (
     SpanSection,
     deflections,
 )
-from lineproof.beams.continuous.deflection_service import STAGES, free_end, span_behind
+from lineproof.beams.continuous.deflection_service import (
+    STAGES,
+    Stage,
+    StageMoments,
+    free_end,
+    span_behind,
+)
 from lineproof.beams.continuous.deflection_shapes import deflected_shapes
 from lineproof.beams.continuous.deflections import service_of, top_at
 from lineproof.beams.continuous.design import Design
@@ -51,12 +58,19 @@ def deflection_shapes_figure(design: Design) -> Figure | None:
     )
 
 
-def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[DeflectionPiece, ...]:
-    model = design.model
-    section = _section(model, span, behind)
+def bent_of(
+    model: Model, span: int, behind: Mapping[int, Behind]
+) -> tuple[SpanSection, dict[Stage, StageMoments]]:
+    """Return what bends in a span and its service moments at every stage, from the sheet."""
     service = service_of(model, span)
     before = _earlier(model, span)
     moments = {stage: replace(service.stages[stage], earlier=before) for stage in STAGES}
+    return _section(model, span, behind), moments
+
+
+def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[DeflectionPiece, ...]:
+    model = design.model
+    section, moments = bent_of(model, span, behind)
     made = deflections(section, moments, carries=model.inputs.carries, history=History())
     behind[span] = Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})
     shapes = deflected_shapes(section, moments, made)
@@ -75,7 +89,7 @@ def _earlier(model: Model, span: int) -> tuple[float, float, float]:
     return values[0], values[1], values[2]
 
 
-def _section(model: Model, span: int, behind: dict[int, Behind]) -> SpanSection:
+def _section(model: Model, span: int, behind: Mapping[int, Behind]) -> SpanSection:
     sheet, find = model.sheet, model.sheet.find
     place = {n: e.value for n, e in span_place(sheet, model.inputs, span).items()}
     free = free_end(model.forces.beam, span)

@@ -6,6 +6,10 @@ from collections.abc import Iterable, Iterator, Sequence
 
 import numpy as np
 
+from lineproof.beams.continuous.cures_flow import COLUMNS as FAILING_COLUMNS
+from lineproof.beams.continuous.cures_flow import TITLE as FAILING
+from lineproof.beams.continuous.cures_flow import WIDTHS as FAILING_WIDTHS
+from lineproof.beams.continuous.cures_flow import failing_rows
 from lineproof.beams.continuous.deflection_figure import deflection_shapes_figure
 from lineproof.beams.continuous.deliverables import record_drawings
 from lineproof.beams.continuous.design import Design
@@ -20,7 +24,7 @@ from lineproof.beams.continuous.figure_loads import loads_figure
 from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
 from lineproof.beams.continuous.model import GIVEN, LOADS, Model
 from lineproof.beams.continuous.resistance import provide, stand
-from lineproof.beams.continuous.resistance_demand import stretch_at
+from lineproof.beams.continuous.resistance_demand import stretches_at
 from lineproof.beams.continuous.summary_tables import (
     FLEXURE,
     FLEXURE_WIDTHS,
@@ -49,7 +53,7 @@ from lineproof.record.entry import VALUES
 from lineproof.sheet import Sheet
 
 SUMMARY = "summary"
-DRAWN, TABLES, TAKE_DOWN, REACTIONS, ALONG = 10, 20, 30, 40, 50
+DRAWN, FAILS, TABLES, TAKE_DOWN, REACTIONS, ALONG = 10, 19, 20, 30, 40, 50
 """Places on the summary pages; the schedules stand behind them."""
 PIECES = 100
 CSV_PIECES = 20
@@ -70,6 +74,9 @@ def record_summary(design: Design) -> None:
     sheet = model.sheet
     with sheet.part(SUMMARY, "Summary of the beam"):
         record_drawings(design, DRAWN)
+        fails = list(failing_rows(model))
+        if fails:
+            _table(sheet, "failing", FAILING, FAILING_COLUMNS, fails, FAILS, widths=FAILING_WIDTHS)
         for number, (key, title, columns, widths, rows) in enumerate(_tables(design)):
             _table(sheet, key, title, columns, rows, TABLES + number, widths=widths)
         _record_loads(model)
@@ -157,7 +164,7 @@ def _record_envelopes(design: Design) -> None:
             provide(design.designed, standing, face, local + left, spans).M_r
             for face in ("bottom", "top")
         )
-        V_r = [stretch_at(design.designed, x).V_r for x in (local + left).tolist()]
+        V_r = [met.V_r for met in stretches_at(design.designed, local + left)]
         x = (local + left).tolist()
         moments.append(
             MomentPiece(span, x, M.max(0).tolist(), M.min(0).tolist(), bottom.tolist(),

@@ -1,0 +1,186 @@
+"""Checks that fail, with what would cure them: a note in the part, a row on the summary."""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Iterable, Iterator
+
+from lineproof.beams.continuous import cures as find
+from lineproof.beams.continuous import cures_checks
+from lineproof.beams.continuous.cures import Cure, Variable, told
+from lineproof.beams.continuous.cures_replay import bound_names
+from lineproof.beams.continuous.cures_sought import cures_of
+from lineproof.beams.continuous.deflection import Behind, History, SpanSection, deflections
+from lineproof.beams.continuous.deflection_figure import bent_of
+from lineproof.beams.continuous.deflection_service import STAGES, span_behind
+from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.shear_chapter import STIRRUPS
+from lineproof.beams.continuous.summary_tables import Row, ratio_text
+from lineproof.errors import UserError
+from lineproof.record import Entry, Part
+from lineproof.record.entry import CHECK
+from lineproof.record.printing import utilisation
+from lineproof.standards.a23_3 import deflection as clause
+from lineproof.standards.a23_3 import deflection_stages as stages
+from lineproof.standards.a23_3 import flexure, shear
+from lineproof.standards.a23_3.bars import BARS
+
+NOT_SOUGHT = (
+    "Depth, steel, width and concrete strength are not what this check is about: no cure is sought "
+    "among them."
+)
+NO_BARS = "No depth, width or concrete strength helps: no bars count here, some must reach here."
+COLUMNS = [
+    "Place",
+    "Check that fails",
+    "Ratio",
+    "What would cure it: each alone, all else and the loads as they are",
+]
+WIDTHS = (44.0, 44.0, 20.0, 0.0)
+TITLE = "What fails and what would cure it"
+_DEFLECTIONS = (clause.LIVE_SMALL, clause.ATTACHED_SMALL, stages.RISE_SMALL)
+_PART = re.compile(r"deflection-(\d+)")
+_SAME = 1e-9
+_WIDEST, _LEAST = 625.0, 75.0
+
+
+def failing(part: Part) -> list[Entry]:
+    """Return the checks of a part that fail and are not accepted by the engineer."""
+    return [
+        entry for entry in part.entries.values()
+        if entry.kind == CHECK and not entry and "exception" not in (entry.extra or {})
+    ]  # fmt: skip
+
+
+def record_cures(model: Model, part: Part) -> None:
+    """Record in the open part, after every check that fails, what would cure it."""
+    said: dict[str, list[str]] = {}
+    for check in failing(part):
+        said.setdefault(cure_text(model, check), []).append(check.symbol)
+    for text, keys in said.items():
+        title = "Cure" if len(said) == 1 else f"Cure: {_titles(part, keys)}"
+        model.sheet.note(f"cure-{keys[-1]}"[:60], text, title=title)
+
+
+def _titles(part: Part, keys: Iterable[str]) -> str:
+    return "; ".join(_title(part.entries[key]) for key in keys)
+
+
+def _title(check: Entry) -> str:
+    title = str((check.extra or {}).get("title") or check.source.title)
+    return title[:1].lower() + title[1:]
+
+
+def cure_text(model: Model, check: Entry) -> str:
+    """Return in a sentence what would cure a check that fails; plainly where nothing is known."""
+    found = _cures(model, check)
+    return told(found) if found else _why_none(check)
+
+
+def _why_none(check: Entry) -> str:
+    if check.source is flexure.STRENGTH and check.value[1] <= 0:
+        return NO_BARS
+    return NOT_SOUGHT
+
+
+def _cures(model: Model, check: Entry) -> list[Cure]:
+    if check.source in _DEFLECTIONS:
+        return _deflection_cures(model, check)
+    if check.source is shear.STRENGTH and "s" not in check.part.entries:
+        return [*_stirrup_cures(model, check), *cures_of(check)]
+    return cures_of(check)
+
+
+def failing_rows(model: Model) -> Iterator[Row]:
+    """Give a row for every check that fails, one for those of a part with the same cures."""
+    for part in model.sheet.parts:
+        rows: dict[str, list[Entry]] = {}
+        for check in failing(part):
+            rows.setdefault(_briefly(model, check), []).append(check)
+        for cure, checks in rows.items():
+            worst = max(checks, key=lambda check: utilisation(check) or math.inf)
+            titles = "; ".join(_title(check) for check in checks)
+            titles = titles[:1].upper() + titles[1:]
+            yield Row((part.title, titles, ratio_text(worst), cure), worst)
+
+
+def _briefly(model: Model, check: Entry) -> str:
+    """Return the cures alone, without what would not do; the whole sentence where none does."""
+    able = [cure.text for cure in _cures(model, check) if cure.value is not None]
+    return "; or ".join(able) if able else cure_text(model, check)
+
+
+# -- stirrups where there are none -----------------------------------------------------------
+
+
+def _stirrup_cures(model: Model, check: Entry) -> list[Cure]:
+    """Return the widest stirrups with which a section without any that count holds.
+
+    Strength, spacing and minimum stirrups hold together.
+    """
+    sheet, bound = model.sheet, bound_names(check) | dict(check.part.entries)
+    names = ("f_c", "f_y", "phi_c", "phi_s", "lambda_", "E_s", "b_w")
+    values = {name: sheet.find(name).value for name in names}
+    values |= {name: bound[name].value for name in ("h", "d", "A_s", "M_f", "V_f")}
+    values |= {"A_v": sheet.entry(f"{STIRRUPS}/A_v").value, "s": _WIDEST}
+    if model.inputs.shear_method == "simplified":
+        del values["M_f"]
+        row = "minimum stirrups or more"
+        values |= {name: shear.SIMPLIFIED.number(row, name) for name in ("beta", "theta")}
+    uses = [
+        rule(values)
+        for rule in (
+            cures_checks.shear_strength, cures_checks.stirrup_spacing, cures_checks.least_stirrups,
+        )
+    ]  # fmt: skip
+    none = f"no stirrups at {_LEAST:g} mm or more"
+    spaced = Variable(find.down(_WIDEST, _LEAST, 25), "stirrups at {} mm", "or less", none)
+    return list(find.cures(lambda changes: max(use(changes) for use in uses), {"s": spaced}))
+
+
+# -- deflections -----------------------------------------------------------------------------
+
+
+def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
+    """Return the cures of a deflection: the whole span is bent again with the changed value."""
+    match = _PART.fullmatch(check.part.key)
+    if match is None:
+        return []
+    span = int(match[1])
+    try:
+        section, moments = bent_of(model, span, _behind(model, span))
+    except UserError:
+        return []
+    values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
+    use = cures_checks.deflecting(section, moments, carries=model.inputs.carries, **values)
+    recorded = utilisation(check)
+    if recorded is None or abs(use({}) - recorded) > _SAME * recorded:
+        return []
+    variables = {
+        "h": find.depth(section.h), "b_w": find.width(section.b_w),
+        "f_c": find.concrete(values["f_c"]), **_steel(model, span, section),
+    }  # fmt: skip
+    return list(find.cures(use, variables))
+
+
+def _behind(model: Model, span: int) -> dict[int, Behind]:
+    """Return the span behind a cantilever, bent."""
+    if not model.forces.beam.cantilever(span):
+        return {}
+    number = span_behind(model.forces.beam, span)
+    if number is None:
+        return {}
+    section, moments = bent_of(model, number, {})
+    made = deflections(section, moments, carries=model.inputs.carries, history=History())
+    return {number: Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})}
+
+
+def _steel(model: Model, span: int, section: SpanSection) -> dict[str, Variable]:
+    place = section.midspan or section.left or section.right
+    part = next((p for p in model.sheet.parts if p.key == f"sag-{span}"), None)
+    areas = {BARS.number(size, "A_b"): size for size in BARS.rows}
+    A_b = None if part is None else part.entries.get("A_b")
+    if place is None or A_b is None or A_b.value not in areas:
+        return {}
+    return {"A_s": find.steel(place.A_s, areas[A_b.value])}

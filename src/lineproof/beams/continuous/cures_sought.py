@@ -1,0 +1,380 @@
+"""What is changed to cure each kind of check, and the cures of one check that fails."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Iterable, Mapping
+from dataclasses import dataclass, replace
+
+from lineproof.beams.continuous import cures as find
+from lineproof.beams.continuous import cures_checks
+from lineproof.beams.continuous.cures import Cure, Utilisation, Variable
+from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, behind, bound_names
+from lineproof.formula import Criterion
+from lineproof.record import Entry
+from lineproof.record.entry import GIVEN, LOOKUP, VALUES
+from lineproof.record.printing import utilisation
+from lineproof.standards.a23_3 import (
+    bars,
+    bearing,
+    crack_control,
+    cutoff,
+    development,
+    flexure,
+    hooks,
+    interface,
+    laps,
+    minimum,
+    shear,
+    shear_bars,
+    torsion,
+)
+from lineproof.standards.a23_3.bars import BARS
+
+_SECTION = ("A_s", "h", "b_w", "f_c")
+_WEB = ("b_w", "h", "f_c")
+SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
+    flexure.STRENGTH: _SECTION,
+    flexure.YIELDS: ("less A_s", "h", "b_w", "f_c"),
+    flexure.UPPER_LAYER_YIELDS: ("h", "f_c"),
+    cutoff.SUFFICES: _SECTION,
+    minimum.BY_AREA: ("A_s",),
+    minimum.BY_CRACKING: ("A_s",),
+    minimum.BY_CRACKING_TOP: ("A_s",),
+    minimum.WAIVER: ("A_s",),
+    minimum.SPREAD: ("n_o",),
+    crack_control.CRACKS: ("number", "bars"),
+    shear.STRENGTH: ("s", *_SECTION),
+    shear.WEB_HOLDS: _WEB,
+    shear.STRAIN_IN_RANGE: ("A_s", "h"),
+    shear.SPACING: ("s", "h"),
+    shear.HAS_MINIMUM: ("s",),
+    shear_bars.TENSION_SIDE_HOLDS: ("A_sd", "s", "h"),
+    shear_bars.CAPPED_HOLDS: ("A_sd", "s", "h"),
+    shear_bars.COMPRESSION_SIDE_HOLDS: ("A_sp", "s", "h"),
+    shear_bars.END_SUPPORT_HOLDS: ("A_sd", "s", "h"),
+    torsion.LEGS_PROVIDED: ("s", "h", "b_w"),
+    torsion.SECTION: _WEB,
+    torsion.CORNER_BARS: ("s",),
+    development.DEVELOPED: ("bars", "f_c", "b_sp"),
+    hooks.FITS: ("bars", "f_c", "b_sp"),
+    cutoff.DEVELOPED_AT_ZERO_MOMENT: ("bars", "A_s", "h", "f_c"),
+    bearing.STRENGTH: ("b_w", "f_c"),
+    interface.STRENGTH: ("f_c",),
+}
+"""What is changed, each alone, by check; ``A_s`` is an area of bars, ``bars`` their size."""
+_BENDING = (flexure.STRENGTH, flexure.YIELDS, cutoff.SUFFICES)
+_LONGER: Mapping[Criterion, str] = {
+    cutoff.EXTENDED: "the bars that end {:g} mm longer",
+    cutoff.CONTINUES: "the bars that go on {:g} mm longer",
+    cutoff.LENGTH_IN_SUPPORT: "the bottom bars {:g} mm longer into the support",
+    cutoff.LONG_PAST_INFLECTION: "the top bars {:g} mm longer",
+    laps.LONG_ENOUGH: "a lap {:g} mm longer",
+}
+_AREAS: Mapping[Criterion, str] = {
+    cutoff.INTO_SIMPLE_SUPPORT: "{:g} mm² more of bottom bars going into the support",
+    cutoff.INTO_CONTINUOUS_SUPPORT: "{:g} mm² more of bottom bars going into the support",
+    cutoff.TOP_PAST_INFLECTION: "{:g} mm² more of top bars going past the inflection",
+    cutoff.CUT_AT_DOUBLE_AREA: "{:g} mm² more of bars going on",
+}
+_WIDEST = 1500
+_STEP = 10.0
+_COUNTS = ("n_b", "n_t", "n_1", "n_d")
+_SAME = 1e-9
+Change = Callable[[float], Mapping[str, float]]
+
+
+@dataclass(frozen=True, eq=False)
+class Sought:
+    """A value that may be changed: which entries it stands for, what can be built, how it is told.
+
+    ``spread`` turns a value into the changes of all entries that follow it.
+    """
+
+    roots: Mapping[str, tuple[Entry, ...]]
+    variable: Variable
+    spread: Change
+    told: Callable[[float], str] | None = None
+    besides: tuple[Entry, ...] = ()
+    """Other checks that must hold with the changed value."""
+
+
+def cures_of(check: Entry) -> list[Cure]:
+    """Return the cures of a check that fails, each found by computing the check again.
+
+    Empty where none is sought: then depth, steel, width and concrete strength are not what it is
+    about.
+    """
+    check = _stand_in(check)
+    test = check.source
+    if test in _LONGER or test in _AREAS:
+        return [_more(check, _LONGER.get(test) or _AREAS[test])]
+    bound = bound_names(check)
+    made = []
+    for name in SOUGHT.get(test, ()):
+        sought = _sought(name, check, bound)
+        cure = None if sought is None else _cure(name, check, bound, sought)
+        if cure is not None:
+            made.append(cure)
+    return made
+
+
+def _stand_in(check: Entry) -> Entry:
+    """Return the check that is solved: steel that is not enough is strength that is not."""
+    if check.source is not flexure.ENOUGH_STEEL:
+        return check
+    strength = check.part.entries.get(flexure.STRENGTH.key)
+    return check if strength is None or strength else strength
+
+
+def _more(check: Entry, words: str) -> Cure:
+    """Return the missing length or area, to ten, of a check ``needed <= provided``."""
+    needed, provided = check.value
+    more = math.ceil((needed - provided) / _STEP - _SAME) * _STEP
+    return Cure("more", more, words.format(more))
+
+
+def _cure(name: str, check: Entry, bound: Mapping[str, Entry], sought: Sought) -> Cure | None:
+    """Return the cure by one value; None where nothing can be said."""
+    use = _utilisation(name, check, bound, sought)
+    if use is None:
+        return None
+    name = "A_s" if name == "less A_s" else name
+    (cure,) = find.cures(use, {name: sought.variable})
+    if cure.value is None:
+        return cure if _all_computed(use, name, sought.variable) else None
+    return cure if sought.told is None else replace(cure, text=sought.told(cure.value))
+
+
+def _all_computed(use: Utilisation, name: str, variable: Variable) -> bool:
+    """Tell whether a check could be computed with every value, so that none may be told."""
+    for value in variable.values:
+        try:
+            use({name: value})
+        except AnotherCaseError:
+            return False
+        except (ArithmeticError, ValueError):
+            continue
+    return bool(variable.values)
+
+
+def _utilisation(
+    name: str, check: Entry, bound: Mapping[str, Entry], sought: Sought
+) -> Utilisation | None:
+    """Return the utilisation as a function of one value, the checks beside it included."""
+    if check.source in _BENDING:
+        return _beside(name, _bending(check, bound), sought)
+    if check.source is minimum.WAIVER:
+        return _minimum(name, check, sought)
+    replays = [Replay.of(each, sought.roots) for each in (check, *sought.besides)]
+    if not replays[0].touches:
+        return None
+
+    def use(changes: Mapping[str, float]) -> float:
+        spread = sought.spread(changes[name]) if changes else {}
+        return max(replay(spread) for replay in replays)
+
+    return use
+
+
+def _beside(name: str, use: Utilisation | None, sought: Sought) -> Utilisation | None:
+    """Return a utilisation together with the other checks that must hold with the value."""
+    replays = [Replay.of(each, sought.roots) for each in sought.besides]
+    if use is None or not replays:
+        return use
+
+    def both(changes: Mapping[str, float]) -> float:
+        spread = sought.spread(changes[name]) if changes else {}
+        return max(use(changes), *(replay(spread) for replay in replays))
+
+    return both
+
+
+def _minimum(name: str, check: Entry, sought: Sought) -> Utilisation:
+    """Return that of the minimum or of its waiver, whichever holds first."""
+    rules = (minimum.BY_AREA, minimum.BY_CRACKING, minimum.BY_CRACKING_TOP)
+    ruled = tuple(e for e in check.part.entries.values() if e.source in rules)
+    replays = [Replay.of(each, sought.roots, apart=ruled) for each in (*ruled, check)]
+
+    def use(changes: Mapping[str, float]) -> float:
+        spread = sought.spread(changes[name]) if changes else {}
+        return min(replay(spread) for replay in replays)
+
+    return use
+
+
+def _bending(check: Entry, bound: Mapping[str, Entry]) -> Utilisation | None:
+    """Return moment over resistance, or c/d over its limit, with the block in flange or web."""
+    names = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "A_s")
+    if any(name not in bound for name in names):
+        return None
+    values = {name: bound[name].value for name in names}
+    if "M_f" in bound:
+        values["M_f"] = bound["M_f"].value
+    for name in ("h", "b_w"):
+        root = _of_symbol(check, name, bound)
+        if root is None:
+            return None
+        values[name] = root.value
+    values["h_f"] = _flange(bound)
+    c_d = next((e.value for e in bound["A_s"].part.entries.values() if e.symbol == "c_d"), None)
+    yields = check.source is flexure.YIELDS
+    use = (cures_checks.yielding if yields else cures_checks.bending)(values, c_d)
+    made, recorded = use({}), utilisation(check)
+    same = recorded is not None and abs(made - recorded) <= _SAME * recorded
+    return use if same or math.isinf(made) else None
+
+
+def _flange(bound: Mapping[str, Entry]) -> float:
+    """Return the thickness of the flange in compression; 0 where the web alone is compressed."""
+    if "h_f" in bound:
+        return float(bound["h_f"].value)
+    for entry in bound["d"].part.entries.values():
+        if entry.source is flexure.IN_FLANGE:
+            return float(entry.args[entry.source.names.index("h_f")].value)
+    return 0.0
+
+
+# -- what may be changed ---------------------------------------------------------------------
+
+
+def _sought(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
+    """Return what a name of :data:`SOUGHT` means in a check; None where it is not in it."""
+    if name in ("A_s", "A_sd", "A_sp", "less A_s"):
+        return _steel(name, check, bound)
+    if name == "bars":
+        return _sizes(check, bound)
+    if name == "number":
+        return _number(check)
+    root = _root(name, check, bound)
+    if root is None:
+        return None
+    makers: Mapping[str, Callable[[float], Variable]] = {
+        "h": find.depth, "b_w": find.width, "f_c": find.concrete, "s": find.spacing,
+        "b_sp": _support, "n_o": lambda n: find.bar_count(int(n)),
+    }  # fmt: skip
+    return _single(name, root, makers[name](root.value))
+
+
+def _single(name: str, root: Entry, variable: Variable) -> Sought:
+    return Sought({name: (root,)}, variable, lambda value: {name: value})
+
+
+def _root(name: str, check: Entry, bound: Mapping[str, Entry]) -> Entry | None:
+    if name == "s":
+        spacing = check.part.entries.get("s")
+        return spacing if spacing is not None and spacing.kind == GIVEN else None
+    if name in ("b_sp", "n_o"):
+        return bound.get(name)
+    return _of_symbol(check, name, bound)
+
+
+def _of_symbol(check: Entry, name: str, bound: Mapping[str, Entry]) -> Entry | None:
+    """Return the given value that a name stands for in a check, or behind it by its symbol."""
+    entry = bound.get(name)
+    if entry is not None and entry.kind == GIVEN and entry.symbol != "h_f":
+        return entry
+    found = [e for e in behind(check) if e.symbol == name and e.kind == GIVEN]
+    return found[-1] if found else None
+
+
+def _support(width: float) -> Variable:
+    none = f"no support up to {_WIDEST} mm along the beam"
+    words = "a support {} mm long along the beam"
+    return Variable(find.up(width, _WIDEST, 10), words, "or more", none)
+
+
+def _steel(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
+    root = bound.get("A_s" if name == "less A_s" else name)
+    size = None if root is None else _size_of(root)
+    if root is None or size is None or root.value <= 0:
+        return None
+    if name == "less A_s":
+        return _single("A_s", root, find.less_steel(root.value, size))
+    variable = find.steel(root.value, size)
+    fits = check.part.entries.get(bars.FITS.key)
+    if fits is None or "d_2" in check.part.entries or root.part is not check.part:
+        return _single(name, root, variable)
+    return _in_one_layer(name, root, size, fits)
+
+
+def _in_one_layer(name: str, root: Entry, size: str, fits: Entry) -> Sought:
+    """Return more bars of a size in a layer, as many as fit beside each other."""
+    (number,) = _counts(behind(fits))
+    A_b = BARS.number(size, "A_b")
+
+    def spread(area: float) -> Mapping[str, float]:
+        more = math.ceil((area - root.value) / A_b - _SAME)
+        return {name: area, "number": number.value + more}
+
+    none = f"no number of bars {size} in one layer"
+    variable = replace(find.steel(root.value, size), none=none)
+    roots = {name: (root,), "number": (number,)}
+    return Sought(roots, variable, spread, besides=(fits,))
+
+
+def _size_of(area: Entry) -> str | None:
+    """Return the largest size of the bars that make up an area; None where none is known."""
+    areas = {BARS.number(size, "A_b"): size for size in BARS.rows}
+    found = [
+        e.value for e in behind(area)
+        if e.kind == LOOKUP and e.unit == "mm2" and e.value in areas
+    ]  # fmt: skip
+    return areas[max(found)] if found else None
+
+
+def _number(check: Entry) -> Sought | None:
+    """Return more bars of the same size beside each other in the web, as many as fit."""
+    fits = check.part.entries.get(bars.FITS.key)
+    if fits is None:
+        return None
+    (number,) = _counts(behind(fits))
+    variable = replace(
+        find.bar_count(int(number.value)), words="{} bars of this size in the layer",
+        none="no number of bars of this size in the layer",
+    )  # fmt: skip
+    return replace(_single("number", number, variable), besides=(fits,))
+
+
+def _sizes(check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
+    """Return smaller bars of at least the same area: diameter, area, factor of size, numbers."""
+    if "d_b" not in bound or bound["d_b"].kind != LOOKUP:
+        return None
+    entries = behind(check)
+    d_b = bound["d_b"]
+    size = next(s for s in BARS.rows if BARS.number(s, "d_b") == d_b.value)
+    of_size = {e.id: e for e in (*entries, *d_b.part.entries.values()) if e.kind in VALUES}
+    areas = tuple(
+        e for e in of_size.values()
+        if e.kind == LOOKUP and e.unit == "mm2" and e.value == BARS.number(size, "A_b")
+    )  # fmt: skip
+    same = tuple(e for e in entries if e.kind == LOOKUP and e.symbol == d_b.symbol
+                 and e.value == d_b.value)  # fmt: skip
+    counts = {f"n{i}": e for i, e in enumerate(_counts(entries))}
+    factors = tuple(e for e in entries if e.symbol == "k_4" and e.kind == LOOKUP)
+    roots = {"d_b": same, "A_b": areas, "k_4": factors} | {k: (e,) for k, e in counts.items()}
+
+    def spread(diameter: float) -> Mapping[str, float]:
+        other = _named(diameter)
+        share = BARS.number(size, "A_b") / BARS.number(other, "A_b")
+        made = {key: float(math.ceil(e.value * share - _SAME)) for key, e in counts.items()}
+        k_4 = development.SIZE.number(other, "k_4")
+        return made | {"d_b": diameter, "A_b": BARS.number(other, "A_b"), "k_4": k_4}
+
+    fits = check.part.entries.get(bars.FITS.key)
+    return Sought(
+        roots, find.bar_size(size), spread,
+        lambda value: f"bars {_named(value)} of at least the same area",
+        () if fits is None else (fits,),
+    )  # fmt: skip
+
+
+def _counts(entries: Iterable[Entry]) -> list[Entry]:
+    return [
+        e for e in entries
+        if e.kind == GIVEN and e.unit == "" and (e.symbol in _COUNTS or e.symbol == "n_o")
+    ]  # fmt: skip
+
+
+def _named(diameter: float) -> str:
+    return next(size for size in BARS.rows if BARS.number(size, "d_b") == diameter)
