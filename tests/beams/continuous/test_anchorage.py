@@ -126,7 +126,7 @@ def test_cover_of_60_needs_no_ties() -> None:
 
 
 def test_ties_stand_on_steps_of_5() -> None:
-    """3 x 25.2 = 75.6: 75; 3 x 16 = 48: 25; 3 x 35.7 = 107.1: 100."""
+    """3 x 25.2 = 75.6: 75; 3 x 16 = 48: 45; 3 x 35.7 = 107.1: 105."""
     assert [tie_spacing(d_b) for d_b in (25.2, 16.0, 35.7)] == [75.0, 45.0, 105.0]
 
 
