@@ -264,6 +264,16 @@ def test_hooks_to_the_edition_whose_rule_is_unknown() -> None:
     )
 
 
+def test_end_supports_too_narrow_for_hooks() -> None:
+    """No bar can be hooked into walls of 150 mm that hold the beam fixed: a wider one is asked."""
+    faults = refused_at(
+        "flexure", spans=["7 m"], supports=["wall 150 mm, fixed", "wall 400 mm, fixed"]
+    )
+    assert faults[0].startswith("top_bars: no bars pass every check at support 1: stopped by")
+    assert "anchorage in the support" in faults[0]
+    assert "write a wider support" in faults[0]
+
+
 def test_a_frame_analysis_that_is_not_there() -> None:
     matches(
         refused_at_start(forces_csv="nowhere.csv", b_w="38 m"),

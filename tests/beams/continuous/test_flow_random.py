@@ -119,6 +119,8 @@ def test_random_beams(inputs: dict[str, Any]) -> None:
     except UserError as error:
         said = error.faults
     assert [fault for fault in said if not any(cure in fault for cure in CURES)] == []
+    # What is chosen here can be bent: faults of bends are for bars that are given.
+    assert [fault for fault in said if "has a leg of" in fault] == []
     if said or beam is None:
         return
     record = beam.sheet.close()

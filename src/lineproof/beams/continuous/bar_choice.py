@@ -135,9 +135,10 @@ def _each_its_own(
             yield min(able, key=lambda c: order([c], [section]))
             continue
         why = "; ".join(text for text, _ in stopped[section.name].most_common(3))
+        support = "a wider support, " if "anchorage in the support" in why else ""
         faults.add(
-            f"{what}: no bars pass every check at {section.name}: stopped by {why}; write a deeper "
-            "or wider beam, or stronger concrete"
+            f"{what}: no bars pass every check at {section.name}: stopped by {why}; write "
+            f"{support}a deeper or wider beam, or stronger concrete"
         )
     faults.raise_if_any()
 

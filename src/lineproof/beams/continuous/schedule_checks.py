@@ -51,7 +51,8 @@ def _bar_faults(outline: BeamOutline, run: BarRun, grade: str, stirrup: float) -
         if hook_leg(run.size, grade) > room:
             found.append(
                 f"{name}: the 90° hook has a leg of {hook_leg(run.size, grade):.0f} mm, more than "
-                f"the {room:.0f} mm between the stirrups' top and bottom"
+                f"the {room:.0f} mm between the stirrups' top and bottom; write thinner bars, or a "
+                "deeper beam"
             )
     return found
 
