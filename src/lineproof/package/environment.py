@@ -66,7 +66,7 @@ class Interned:
     """The texts and trees of one document, in the order of their first use."""
 
     items: list[Any] = field(default_factory=list)
-    places: dict[str, int] = field(default_factory=dict)
+    places: dict[object, int] = field(default_factory=dict)
     long_words: bool = False
 
     def place(self, value: object) -> str:
@@ -81,7 +81,11 @@ class Interned:
             case Prose(blocks):
                 return self._add([prose_tree(block) for block in blocks])
         if isinstance(value, _NODES):
-            return self._add(typst_tree(value))
+            known = self.places.get(value)  # a symbol stands in many lines
+            if known is None:
+                known = self.places[value] = len(self.items)
+                self.items.append(typst_tree(value))
+            return f"t.at({known})"
         msg = (
             f"{type(value).__name__} in the Typst template; only text, maths and prose are printed"
         )

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from lineproof.formula.notation import GREEK
 from lineproof.typeset.glyphs import printable
 from lineproof.typeset.nodes import (
@@ -26,6 +28,7 @@ _NAMES = {letter: name for name, letter in reversed(GREEK.items())}
 _SIGNS = {"−": "-", "×": "x", "≤": "<=", "≥": ">="}
 
 
+@lru_cache(maxsize=16384)
 def plain(math: Math) -> str:
     """Return the formula in one line of plain text.
 

@@ -59,6 +59,7 @@ def split_number(text: str) -> tuple[str, str, str] | None:
     return ("-" if sign == "-" else ""), digits, str(int(power)) if power else ""
 
 
+@lru_cache(maxsize=16384)
 def number_math(text: str) -> Math:
     """Return a number text as nodes: true minus, ``5.00e9`` as 5.00 × 10⁹."""
     parts = split_number(text)
@@ -139,6 +140,7 @@ def symbol_of(symbol_id: str, notation: Notation) -> Symbol:
     return found if found is not None else symbol_from_id(symbol_id)
 
 
+@lru_cache(maxsize=4096)
 def symbol_math(symbol: Symbol) -> Math:
     """Return a symbol as nodes: one letter italic, longer bases and all scripts upright."""
     base: Math = Letter(symbol.base) if _is_variable(symbol.base) else Word(symbol.base)
