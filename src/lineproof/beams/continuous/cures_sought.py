@@ -65,10 +65,10 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
 """What is changed, each alone, by check; ``A_s`` is an area of bars, ``bars`` their size."""
 _BENDING = (flexure.STRENGTH, flexure.YIELDS, cutoff.SUFFICES)
 _LONGER: Mapping[Criterion, str] = {
-    cutoff.EXTENDED: "the bars that end {:g} mm longer",
-    cutoff.CONTINUES: "the bars that go on {:g} mm longer",
-    cutoff.LENGTH_IN_SUPPORT: "the bottom bars {:g} mm longer into the support",
-    cutoff.LONG_PAST_INFLECTION: "the top bars {:g} mm longer",
+    cutoff.EXTENDED: "the bars that end here made {:g} mm longer",
+    cutoff.CONTINUES: "the bars that go on made {:g} mm longer",
+    cutoff.LENGTH_IN_SUPPORT: "the bottom bars made {:g} mm longer into the support",
+    cutoff.LONG_PAST_INFLECTION: "the top bars made {:g} mm longer",
     laps.LONG_ENOUGH: "a lap {:g} mm longer",
 }
 _AREAS: Mapping[Criterion, str] = {

@@ -53,7 +53,7 @@ from lineproof.record.entry import VALUES
 from lineproof.sheet import Sheet
 
 SUMMARY = "summary"
-DRAWN, FAILS, TABLES, TAKE_DOWN, REACTIONS, ALONG = 10, 19, 20, 30, 40, 50
+FAILS, DRAWN, TABLES, TAKE_DOWN, REACTIONS, ALONG = 5, 10, 20, 30, 40, 50
 """Places on the summary pages; the schedules stand behind them."""
 PIECES = 100
 CSV_PIECES = 20
