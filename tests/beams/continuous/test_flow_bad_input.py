@@ -10,7 +10,7 @@ import pytest
 from lineproof.errors import UserError
 from lineproof.sheet import Sheet
 
-from .flow import CALLS, PROJECT, start
+from .flow import CALLS, PROJECT, run, start
 
 BOTTOM = {"face": "bottom", "bars": "4-25M", "start": "-0.15 m", "end": "24.55 m"}
 TOP = {"face": "top", "bars": "5-25M", "start": "-0.15 m", "end": "24.55 m"}
@@ -262,6 +262,37 @@ def test_hooks_to_the_edition_whose_rule_is_unknown() -> None:
         "bar run 1, hook_start: hooks cannot be calculated to CSA A23.3:24, whose expression is "
         "not known here; write straight bars",
     )
+
+
+def test_a_construction_stage_beside_single_live_loads() -> None:
+    matches(
+        refused_at_start(
+            construction_load="2.4 kPa",
+            loads=[
+                {"type": "D", "span": 2, "point": "4 kN", "at": "3 m"},
+                {"type": "L", "span": 2, "point": "4 kN", "at": "3 m"},
+            ],
+        ),
+        "construction_load: 2.4 kPa cannot stand in the place of single live loads (load 2); leave",
+    )
+
+
+def test_a_span_whose_middle_hogs_and_cracks() -> None:
+    """5.5 m beside 9 m: no deflection is computed there, and the sheet does not close."""
+    beam = start(
+        spans=["9 m", "5.5 m"], supports=["wall 300 mm", "column 450 mm", "wall 300 mm"],
+        f_c="40 MPa",
+    )  # fmt: skip
+    run(beam, CALLS[: CALLS.index("deflections")])
+    with pytest.raises(UserError) as caught:
+        beam.deflections()
+    matches(
+        list(caught.value.faults),
+        "span 2, midspan: the moment under service load is hogging and cracks the section, for "
+        "which no deflection is computed here; write a deeper beam or stronger concrete",
+    )
+    with pytest.raises(UserError, match=r"beam\.deflections\(\) stopped with an error"):
+        beam.sheet.close()
 
 
 def test_end_supports_too_narrow_for_hooks() -> None:

@@ -24,8 +24,8 @@ FINAL = "5 years or more"
 ATTACHED = "3 months"
 DAMAGED = "roof or floor with parts attached that deflection damages"
 NO_TOP_BARS = (
-    "midspan: the moment under service load is hogging and cracks the section; its deflection "
-    "cannot be computed without top bars there: give those that run through the span"
+    "midspan: the moment under service load is hogging and cracks the section, for which no "
+    "deflection is computed here; write a deeper beam or stronger concrete, so that it stays whole"
 )
 LIVE_LIMITS = (
     "flat roof, nothing attached that deflection damages",

@@ -39,7 +39,7 @@ from lineproof.beams.inputs import (
     yes_or_no,
 )
 from lineproof.errors import FaultList, UserError
-from lineproof.quantity import QuantityInput, Typed, echo
+from lineproof.quantity import Typed, echo
 from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_SLAB
 from lineproof.standards.a23_3.deflection import LIMITS
@@ -180,6 +180,7 @@ def read_inputs(
     _check_method(fields, reader.faults)
     if spans:
         _check_torques(fields, reader.faults)
+        _check_construction(fields, reader.faults)
     if not reader.faults.faults:
         _check_proportions(fields, reader.faults)
     reader.faults.raise_if_any()
@@ -334,6 +335,19 @@ def _check_snow(fields: Mapping[str, Any], faults: FaultList) -> None:
         )
 
 
+def _check_construction(fields: Mapping[str, Any], faults: FaultList) -> None:
+    """Refuse a construction stage beside single live loads: deflections cannot scale those."""
+    if fields["construction_load"] is None or fields["forces_file"] is not None:
+        return
+    single = [n for n, load in enumerate(fields.get("loads") or (), 1) if load.kind.startswith("L")]
+    if single:
+        faults.add(
+            f"construction_load: {fields['construction_load'].text} cannot stand in the place of "
+            f"single live loads (load {', '.join(str(n) for n in single)}); leave it out, or give "
+            "them as dead load of a calculation of that stage"
+        )
+
+
 def _check_proportions(fields: Mapping[str, Any], faults: FaultList) -> None:
     """Refuse beams that cannot stand, slabs thicker than the beam, and deep beams."""
     try:
@@ -381,6 +395,3 @@ def _check_depth(
         f"span {number}: its clear length of {clear / 1000:g} m is less than {limit} of "
         f"{depth.text}: {what} is outside the method; use strut-and-tie (A23.3, 10.7)"
     )
-
-
-QuantityOrList = QuantityInput | list[QuantityInput]
