@@ -214,13 +214,14 @@ def test_what_all_calcs_say_is_said_once(several: Package, printed: list[str], p
 
 
 def test_values_to_confirm_are_merged_by_clause(several: Package, printed: list[str]) -> None:
+    """Lines that repeat one with the same resistance are not named again."""
     (item,) = several.to_confirm
     assert (item.clause, item.what, item.confirmed) == ("10.1.7", "Resistance", "")
     assert item.calcs == (
-        ("B9", tuple((f"B9/flexure-{n}/M_r", f"{n}.2") for n in (1, 2, 3))),
-        ("B10", tuple((f"B10/flexure-{n}/M_r", f"{n}.2") for n in (1, 2, 3))),
+        ("B9", (("B9/flexure-1/M_r", "1.2"),)),
+        ("B10", tuple((f"B10/flexure-{n}/M_r", f"{n}.2") for n in (1, 2))),
     )
-    assert "10.1.7 Resistance B9: 1.2, 2.2, 3.2 B10: 1.2, 2.2, 3.2" in " ".join(printed)
+    assert "10.1.7 Resistance B9: 1.2 B10: 1.2, 2.2" in " ".join(printed)
 
 
 def test_a_clause_is_confirmed_when_it_is_for_every_calc(holding: Record, failing: Record) -> None:

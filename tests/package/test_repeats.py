@@ -132,3 +132,16 @@ def test_pdf_tells_what_a_repeated_line_is() -> None:
 def test_working_without_repeated_lines_does_not_explain_them() -> None:
     """No sentence without a cause."""
     assert "repeats the line" not in to_html(build_package([record_of(["90 kN.m"])]))
+
+
+def test_values_to_confirm_name_no_repeated_line() -> None:
+    """The line of the first span stands for that of the second, which repeats it."""
+    record = record_of(["90 kN.m", "90 kN.m", "80 kN.m"])
+    lines = ["span-1/M_f", "span-2/M_f", "span-3/M_f"]
+    record["confirm"] = [
+        {"clause": "8.3.2", "what": "Factor", "basis": "from memory", "confirmed": "",
+         "lines": lines},
+    ]  # fmt: skip
+    items = build_package([record]).calcs[0].confirm
+
+    assert [label for item in items for _, label in item.lines] == ["2.2", "4.2"]

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from typing import Any
 
@@ -21,6 +21,7 @@ from lineproof.package.merged import (
 from lineproof.package.prose import Mark, Prose, read_prose
 from lineproof.package.repeats import Worked
 from lineproof.package.summary import (
+    Confirmation,
     Failure,
     NotationRow,
     confirmations,
@@ -195,6 +196,7 @@ class _Builder:
         front = sorted((r for r in rows if r.front is not None), key=_front_key)
         # A calc that says what stands in front says it all.
         figures = [r for r in rows if r.kind == "figure" and not front]
+        blocks = self._blocks(walk)
         return Calc(
             id=record["calc"]["id"],
             title=record["calc"].get("title", ""),
@@ -202,13 +204,15 @@ class _Builder:
             member=record.get("kind_of_member", ""),
             digest=record["digest"],
             record_text=json_text(record),
-            blocks=self._blocks(walk),
+            blocks=blocks,
             summary=summary_rows(record["parts"], self.rows, self.notation, self.prefix),
             loads=() if front else load_rows(record["parts"], self.rows, self.prefix),
             section=next((f for f in figures if f.id.endswith("/section")), None),
             loading=tuple(f for f in figures if f.id.endswith(("/plan", "/loading"))),
             failures=failures(record, self.rows, self.prefix),
-            confirm=confirmations(record, self.rows, self.prefix),
+            confirm=tuple(
+                self._worked_lines(confirmations(record, self.rows, self.prefix), blocks)
+            ),
             scope=status.get("scope", ""),
             not_covered=tuple(
                 NotCovered(item["check"], item.get("clause", ""))
@@ -218,6 +222,21 @@ class _Builder:
             statements=() if front else tuple(r.text for r in rows if r.id.endswith("/bars-text")),
             front=tuple(front),
         )
+
+    def _worked_lines(
+        self, items: Iterable[Confirmation], blocks: Iterable[PartBlock | ProseBlock]
+    ) -> Iterator[Confirmation]:
+        """Leave out lines that repeat others: these stand in the list by their first."""
+        repeated = {
+            self.prefix + same.row.id
+            for block in blocks
+            if isinstance(block, PartBlock)
+            for group in block.groups
+            for same in group.repeated
+        }
+        for item in items:
+            lines = tuple(line for line in item.lines if line[0] not in repeated)
+            yield replace(item, lines=lines)
 
     def _blocks(self, walk: Walk | None) -> tuple[PartBlock | ProseBlock, ...]:
         parts = {part["key"]: part for part in self.record["parts"]}
