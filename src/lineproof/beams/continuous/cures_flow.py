@@ -10,8 +10,8 @@ from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure, Variable, told
 from lineproof.beams.continuous.cures_replay import bound_names
-from lineproof.beams.continuous.cures_sought import cures_of
-from lineproof.beams.continuous.deflection import Behind, History, SpanSection, deflections
+from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
+from lineproof.beams.continuous.deflection import Behind, History, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
 from lineproof.beams.continuous.deflection_service import STAGES, span_behind
 from lineproof.beams.continuous.model import Model
@@ -24,7 +24,6 @@ from lineproof.record.printing import utilisation
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 from lineproof.standards.a23_3 import flexure, shear
-from lineproof.standards.a23_3.bars import BARS
 
 NOT_SOUGHT = (
     "Depth, steel, width and concrete strength are not what this check is about: no cure is sought "
@@ -153,15 +152,18 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     except UserError:
         return []
     values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
-    use = cures_checks.deflecting(section, moments, carries=model.inputs.carries, **values)
+    use = cures_checks.deflecting(section, moments, carries=model.inputs.carries, history=history_of(model), **values)
     recorded = utilisation(check)
     if recorded is None or abs(use({}) - recorded) > _SAME * recorded:
         return []
     variables = {
         "h": find.depth(section.h), "b_w": find.width(section.b_w),
-        "f_c": find.concrete(values["f_c"]), **_steel(model, span, section),
+        "f_c": find.concrete(values["f_c"]),
     }  # fmt: skip
-    return list(find.cures(use, variables))
+    sag = next((part for part in model.sheet.parts if part.key == f"sag-{span}"), None)
+    beside = None if sag is None else beside_each_other(sag, use)
+    steel = () if beside is None else find.cures(beside[0], {"A_s": beside[1]})
+    return [*steel, *find.cures(use, variables)]
 
 
 def _behind(model: Model, span: int) -> dict[int, Behind]:
@@ -172,15 +174,5 @@ def _behind(model: Model, span: int) -> dict[int, Behind]:
     if number is None:
         return {}
     section, moments = bent_of(model, number, {})
-    made = deflections(section, moments, carries=model.inputs.carries, history=History())
+    made = deflections(section, moments, carries=model.inputs.carries, history=history_of(model))
     return {number: Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})}
-
-
-def _steel(model: Model, span: int, section: SpanSection) -> dict[str, Variable]:
-    place = section.midspan or section.left or section.right
-    part = next((p for p in model.sheet.parts if p.key == f"sag-{span}"), None)
-    areas = {BARS.number(size, "A_b"): size for size in BARS.rows}
-    A_b = None if part is None else part.entries.get("A_b")
-    if place is None or A_b is None or A_b.value not in areas:
-        return {}
-    return {"A_s": find.steel(place.A_s, areas[A_b.value])}

@@ -1,4 +1,4 @@
-"""What is changed to cure each kind of check, and the cures of one check that fails."""
+"""The cures of one check that fails: what may be changed in it, and the nearest that holds."""
 
 from __future__ import annotations
 
@@ -10,74 +10,19 @@ from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure, Utilisation, Variable
 from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, behind, bound_names
-from lineproof.formula import Criterion
-from lineproof.record import Entry
+from lineproof.beams.continuous.cures_table import LONGER, MORE_AREA, SOUGHT
+from lineproof.record import Entry, Part
 from lineproof.record.entry import GIVEN, LOOKUP, VALUES
 from lineproof.record.printing import utilisation
-from lineproof.standards.a23_3 import (
-    bars,
-    bearing,
-    crack_control,
-    cutoff,
-    development,
-    flexure,
-    hooks,
-    interface,
-    laps,
-    minimum,
-    shear,
-    shear_bars,
-    torsion,
-)
+from lineproof.standards.a23_3 import bars, cutoff, development, flexure, minimum
 from lineproof.standards.a23_3.bars import BARS
 
-_SECTION = ("A_s", "h", "b_w", "f_c")
-_WEB = ("b_w", "h", "f_c")
-SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
-    flexure.STRENGTH: _SECTION,
-    flexure.YIELDS: ("less A_s", "h", "b_w", "f_c"),
-    flexure.UPPER_LAYER_YIELDS: ("h", "f_c"),
-    cutoff.SUFFICES: _SECTION,
-    minimum.BY_AREA: ("A_s",),
-    minimum.BY_CRACKING: ("A_s",),
-    minimum.BY_CRACKING_TOP: ("A_s",),
-    minimum.WAIVER: ("A_s",),
-    minimum.SPREAD: ("n_o",),
-    crack_control.CRACKS: ("number", "bars"),
-    shear.STRENGTH: ("s", *_SECTION),
-    shear.WEB_HOLDS: _WEB,
-    shear.STRAIN_IN_RANGE: ("A_s", "h"),
-    shear.SPACING: ("s", "h"),
-    shear.HAS_MINIMUM: ("s",),
-    shear_bars.TENSION_SIDE_HOLDS: ("A_sd", "s", "h"),
-    shear_bars.CAPPED_HOLDS: ("A_sd", "s", "h"),
-    shear_bars.COMPRESSION_SIDE_HOLDS: ("A_sp", "s", "h"),
-    shear_bars.END_SUPPORT_HOLDS: ("A_sd", "s", "h"),
-    torsion.LEGS_PROVIDED: ("s", "h", "b_w"),
-    torsion.SECTION: _WEB,
-    torsion.CORNER_BARS: ("s",),
-    development.DEVELOPED: ("bars", "f_c", "b_sp"),
-    hooks.FITS: ("bars", "f_c", "b_sp"),
-    cutoff.DEVELOPED_AT_ZERO_MOMENT: ("bars", "A_s", "h", "f_c"),
-    bearing.STRENGTH: ("b_w", "f_c"),
-    interface.STRENGTH: ("f_c",),
-}
-"""What is changed, each alone, by check; ``A_s`` is an area of bars, ``bars`` their size."""
 _BENDING = (flexure.STRENGTH, flexure.YIELDS, cutoff.SUFFICES)
-_LONGER: Mapping[Criterion, str] = {
-    cutoff.EXTENDED: "the bars that end here made {:g} mm longer",
-    cutoff.CONTINUES: "the bars that go on made {:g} mm longer",
-    cutoff.LENGTH_IN_SUPPORT: "the bottom bars made {:g} mm longer into the support",
-    cutoff.LONG_PAST_INFLECTION: "the top bars made {:g} mm longer",
-    laps.LONG_ENOUGH: "a lap {:g} mm longer",
-}
-_AREAS: Mapping[Criterion, str] = {
-    cutoff.INTO_SIMPLE_SUPPORT: "{:g} mm² more of bottom bars going into the support",
-    cutoff.INTO_CONTINUOUS_SUPPORT: "{:g} mm² more of bottom bars going into the support",
-    cutoff.TOP_PAST_INFLECTION: "{:g} mm² more of top bars going past the inflection",
-    cutoff.CUT_AT_DOUBLE_AREA: "{:g} mm² more of bars going on",
-}
+_FITS = bars.FITS.key
+NONE_IN_LAYER = "no number of bars {} in one layer"
 _WIDEST = 1500
+_MOST_STEEL = 6000.0
+"""Area up to which steel is sought, or four times what there is [mm2]."""
 _STEP = 10.0
 _COUNTS = ("n_b", "n_t", "n_1", "n_d")
 _SAME = 1e-9
@@ -107,8 +52,8 @@ def cures_of(check: Entry) -> list[Cure]:
     """
     check = _stand_in(check)
     test = check.source
-    if test in _LONGER or test in _AREAS:
-        return [_more(check, _LONGER.get(test) or _AREAS[test])]
+    if test in LONGER or test in MORE_AREA:
+        return [_more(check, LONGER.get(test) or MORE_AREA[test])]
     bound = bound_names(check)
     made = []
     for name in SOUGHT.get(test, ()):
@@ -239,7 +184,7 @@ def _flange(bound: Mapping[str, Entry]) -> float:
 
 
 def _sought(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
-    """Return what a name of :data:`SOUGHT` means in a check; None where it is not in it."""
+    """Return what a name of ``SOUGHT`` means in a check; None where it is not in it."""
     if name in ("A_s", "A_sd", "A_sp", "less A_s"):
         return _steel(name, check, bound)
     if name == "bars":
@@ -251,7 +196,7 @@ def _sought(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | Non
         return None
     makers: Mapping[str, Callable[[float], Variable]] = {
         "h": find.depth, "b_w": find.width, "f_c": find.concrete, "s": find.spacing,
-        "b_sp": _support, "n_o": lambda n: find.bar_count(int(n)),
+        "b_sp": _support, "n_o": _overhang,
     }  # fmt: skip
     return _single(name, root, makers[name](root.value))
 
@@ -278,6 +223,11 @@ def _of_symbol(check: Entry, name: str, bound: Mapping[str, Entry]) -> Entry | N
     return found[-1] if found else None
 
 
+def _overhang(number: float) -> Variable:
+    words = "{} bars of this size in each overhang"
+    return replace(find.bar_count(int(number)), words=words)
+
+
 def _support(width: float) -> Variable:
     none = f"no support up to {_WIDEST} mm along the beam"
     words = "a support {} mm long along the beam"
@@ -291,9 +241,10 @@ def _steel(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None
         return None
     if name == "less A_s":
         return _single("A_s", root, find.less_steel(root.value, size))
-    variable = find.steel(root.value, size)
-    fits = check.part.entries.get(bars.FITS.key)
-    if fits is None or "d_2" in check.part.entries or root.part is not check.part:
+    variable = find.steel(root.value, size, _most(root.value))
+    parts = [check.part, *(bound[n].part for n in ("d",) if n in bound)]
+    fits = next((part.entries[_FITS] for part in parts if _FITS in part.entries), None)
+    if fits is None or "d_2" in fits.part.entries:
         return _single(name, root, variable)
     return _in_one_layer(name, root, size, fits)
 
@@ -301,16 +252,39 @@ def _steel(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None
 def _in_one_layer(name: str, root: Entry, size: str, fits: Entry) -> Sought:
     """Return more bars of a size in a layer, as many as fit beside each other."""
     (number,) = _counts(behind(fits))
-    A_b = BARS.number(size, "A_b")
 
     def spread(area: float) -> Mapping[str, float]:
-        more = math.ceil((area - root.value) / A_b - _SAME)
-        return {name: area, "number": number.value + more}
+        return {name: area, "number": number.value + _more_bars(root.value, area, size)}
 
-    none = f"no number of bars {size} in one layer"
-    variable = replace(find.steel(root.value, size), none=none)
+    variable = replace(
+        find.steel(root.value, size, _most(root.value)), none=NONE_IN_LAYER.format(size)
+    )
     roots = {name: (root,), "number": (number,)}
     return Sought(roots, variable, spread, besides=(fits,))
+
+
+def _most(area: float) -> float:
+    return max(4 * area, _MOST_STEEL)
+
+
+def _more_bars(before: float, area: float, size: str) -> int:
+    return math.ceil((area - before) / BARS.number(size, "A_b") - _SAME)
+
+
+def beside_each_other(part: Part, use: Utilisation) -> tuple[Utilisation, Variable] | None:
+    """Return a utilisation in which more steel must also fit, and the steel of one layer.
+
+    ``part`` is that of a section with its bars; None where they lie in two layers or are of no
+    known size. A changed ``A_s`` is the area of the section.
+    """
+    area = part.entries.get("A_s")
+    size = None if area is None else _size_of(area)
+    fits = part.entries.get(_FITS)
+    if area is None or size is None or fits is None or "d_2" in part.entries:
+        return None
+    sought = _in_one_layer("A_s", area, size, fits)
+    both = _beside("A_s", use, sought)
+    return None if both is None else (both, sought.variable)
 
 
 def _size_of(area: Entry) -> str | None:
@@ -325,7 +299,7 @@ def _size_of(area: Entry) -> str | None:
 
 def _number(check: Entry) -> Sought | None:
     """Return more bars of the same size beside each other in the web, as many as fit."""
-    fits = check.part.entries.get(bars.FITS.key)
+    fits = check.part.entries.get(_FITS)
     if fits is None:
         return None
     (number,) = _counts(behind(fits))
@@ -361,7 +335,7 @@ def _sizes(check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
         k_4 = development.SIZE.number(other, "k_4")
         return made | {"d_b": diameter, "A_b": BARS.number(other, "A_b"), "k_4": k_4}
 
-    fits = check.part.entries.get(bars.FITS.key)
+    fits = check.part.entries.get(_FITS)
     return Sought(
         roots, find.bar_size(size), spread,
         lambda value: f"bars {_named(value)} of at least the same area",
