@@ -27,7 +27,8 @@ _FUNCTIONS: dict[str, Callable[..., Number]] = {
 # One printed unit in units of the system that the arguments are printed in.
 FACTORS: dict[str, dict[str, Fraction]] = {
     "N-mm": {
-        "": Fraction(1), "mm": Fraction(1), "mm2": Fraction(1), "mm3": Fraction(1), "mm4": Fraction(1),
+        "": Fraction(1), "mm": Fraction(1), "mm2": Fraction(1), "mm3": Fraction(1),
+        "mm4": Fraction(1),
         "MPa": Fraction(1), "N": Fraction(1), "N/mm": Fraction(1), "N.mm": Fraction(1),
         "m": Fraction(1000), "kN": Fraction(1000), "kN.m": Fraction(10**6), "kN/m": Fraction(1),
         "deg": Fraction(1), "mm2/mm": Fraction(1),

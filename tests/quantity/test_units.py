@@ -25,7 +25,7 @@ PINT_NAMES = {
     "ksf": "kip/foot**2", "N/mm3": "N/mm**3", "kN/m3": "kN/m**3", "pcf": "pound_force/foot**3",
     "kg/m3": "kg/m**3", "lb/ft3": "pound/foot**3", "lb": "pound", "lb/ft": "pound/foot",
     "deg": "degree", "rad": "radian", "h": "hour", "min": "minute", "d": "day",
-    "mm2/mm": "mm**2/mm", "mm2/m": "mm**2/m",
+    "mm2/mm": "mm**2/mm", "mm2/m": "mm**2/m", "N.mm2": "N*mm**2", "kN.m2": "kN*m**2",
 }  # fmt: skip
 
 

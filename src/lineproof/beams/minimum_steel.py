@@ -41,7 +41,7 @@ def minimum_of(
     steps.sheet.note(
         "waiver-rests-on",
         "The waiver rests on the factored moment above; where that moment is assumed, so is the "
-        "waiver, and the section cracks before it yields if the moment is larger.",
+        "waiver, and with a larger moment the bars may yield as the section cracks.",
         title="Waiver",
         clause="10.5.1.3",
     )

@@ -131,7 +131,8 @@ _EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "forc
 METRE_SYSTEM = {
     "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
     "moment": "kN.m", "load per length": "kN/m", "stress or pressure": "kPa",
-    "unit weight": "kN/m3", "bending stiffness": "kN.m2", "one over length": "1/m", "area per length": "mm2/mm",
+    "unit weight": "kN/m3", "one over length": "1/m", "area per length": "mm2/mm",
+    "bending stiffness": "kN.m2",
 }  # fmt: skip
 """Units in which a formula of loads is substituted: kN and m instead of N and mm."""
 

@@ -16,28 +16,29 @@ class Procedure:
     """A named numerical procedure.
 
     ``function`` takes the arguments ``names`` as floats in internal units, then the settings by
-    keyword; raise ``version`` whenever its results change. With ``names`` None it takes whatever
-    arguments a value needs, as one mapping by name: a beam has as many spans as it has.
+    keyword; raise ``version`` whenever its results change. One that goes ``by_name`` takes whatever
+    arguments a value needs, as one mapping: a beam has as many spans as it has.
     """
 
     name: str
     version: int
     title: str
-    names: tuple[str, ...] | None
+    names: tuple[str, ...]
     function: Callable[..., float]
+    by_name: bool = False
 
     def takes(self, names: Collection[str]) -> bool:
         """Tell whether these are the arguments it takes."""
-        return self.names is None or set(self.names) == set(names)
+        return self.by_name or set(self.names) == set(names)
 
 
 def procedure(
     name: str, version: int, title: str, names: tuple[str, ...] | None
 ) -> Callable[[Callable[..., float]], Procedure]:
-    """Register a function as a procedure."""
+    """Register a function as a procedure; without ``names`` it takes its arguments by name."""
 
     def register(function: Callable[..., float]) -> Procedure:
-        made = Procedure(name, version, title, names, function)
+        made = Procedure(name, version, title, names or (), function, by_name=names is None)
         PROCEDURES[name] = made
         return made
 
@@ -52,6 +53,6 @@ def recall(name: str, version: int) -> Procedure | None:
 
 def run(made: Procedure, values: Mapping[str, float], settings: Mapping[str, float]) -> float:
     """Run a procedure on named values."""
-    if made.names is None:
+    if made.by_name:
         return float(made.function(values, **settings))
     return float(made.function(*[values[name] for name in made.names], **settings))

@@ -127,7 +127,7 @@ def _value(entry: Mapping[str, Any], values: Mapping[str, float]) -> float:
         raise UserError(f"procedure {entry['procedure']['name']!r} is not known here")
     named = {name: values[target] for name, target in entry["args"].items()}
     if not made.takes(named):
-        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names or ())}")
+        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names)}")
     value = run(made, named, entry["settings"])
     if not math.isfinite(value):
         raise UserError(f"procedure {made.name!r} finds no finite number")

@@ -66,7 +66,7 @@ class Finding(Shown):
         The closing criterion may name the found symbol, the procedure's arguments and whatever
         else is in scope; if it does not hold the value is refused.
         """
-        names = procedure.names or ()
+        names = procedure.names
         inner = {n: e for n, e in bound.items() if n in names}
         args = dict(zip(names, self._arguments(names, inner), strict=True))
         wanted = Wanted(symbol, closing, unit, args, settings or {}, title, clause, basis, bound)

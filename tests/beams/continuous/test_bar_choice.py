@@ -71,7 +71,7 @@ def _best_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int] | None:
         if None not in per_span:
             columns = zip(*[row for row in per_span if row is not None], strict=True)
             keys.append(tuple(sum(column) for column in columns))
-    return min(keys, default=None)  # type: ignore[return-value]  # three numbers
+    return min(keys, default=None)
 
 
 def _key_of_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int]:

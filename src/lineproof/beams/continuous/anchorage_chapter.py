@@ -45,7 +45,7 @@ def _record_shear(steps: Steps, stretch: ShearStretch) -> None:
     """Record what the stirrups of the shear chapter resist over a stretch, rounded down."""
     sheet = steps.sheet
     place = f"{stretch.start / 1000:.2f} to {stretch.end / 1000:.2f} m from support 1"
-    source = f"shear, smallest of all load cases, {place}"
+    source = f"shear chapter, smallest of each over all load cases, {place}"
     steps.bind(
         V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source=source),
         V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source=source),

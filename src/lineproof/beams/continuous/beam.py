@@ -202,6 +202,7 @@ def continuous_beam(
     top_bars: Sequence[str | None] | str | None = None,
     minimum_rule: str = "10.5.1.2",
     carries: str = "roof or floor with parts attached that deflection damages",
+    attached_after: str = "3 months",
     sustained: QuantityInput | None = None,
     redistribution: Mapping[int, float] | None = None,
     stirrup_legs: int = 2,

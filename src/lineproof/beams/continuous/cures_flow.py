@@ -11,9 +11,10 @@ from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure, Variable, told
 from lineproof.beams.continuous.cures_replay import bound_names
 from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
-from lineproof.beams.continuous.deflection import Behind, History, deflections
+from lineproof.beams.continuous.deflection import Behind, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
 from lineproof.beams.continuous.deflection_service import STAGES, span_behind
+from lineproof.beams.continuous.deflections import history_of
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.shear_chapter import STIRRUPS
 from lineproof.beams.continuous.summary_tables import Row, ratio_text
@@ -152,7 +153,9 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     except UserError:
         return []
     values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
-    use = cures_checks.deflecting(section, moments, carries=model.inputs.carries, history=history_of(model), **values)
+    use = cures_checks.deflecting(
+        section, moments, carries=model.inputs.carries, history=history_of(model), **values
+    )
     recorded = utilisation(check)
     if recorded is None or abs(use({}) - recorded) > _SAME * recorded:
         return []

@@ -7,7 +7,6 @@ from dataclasses import replace
 
 from lineproof.beams.continuous.deflection import (
     Behind,
-    History,
     Place,
     SpanSection,
     deflections,
@@ -20,7 +19,7 @@ from lineproof.beams.continuous.deflection_service import (
     span_behind,
 )
 from lineproof.beams.continuous.deflection_shapes import deflected_shapes
-from lineproof.beams.continuous.deflections import service_of, top_at
+from lineproof.beams.continuous.deflections import history_of, service_of, top_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.figure_deflection import (
     DeflectionCurve,
@@ -71,7 +70,7 @@ def bent_of(
 def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[DeflectionPiece, ...]:
     model = design.model
     section, moments = bent_of(model, span, behind)
-    made = deflections(section, moments, carries=model.inputs.carries, history=History())
+    made = deflections(section, moments, carries=model.inputs.carries, history=history_of(model))
     behind[span] = Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})
     shapes = deflected_shapes(section, moments, made)
     x = (shapes.x + design.outline.axes[span - 1]).tolist()

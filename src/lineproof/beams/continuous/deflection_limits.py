@@ -15,8 +15,9 @@ from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 
 _HISTORY = (
-    "Parts that the span carries are attached {attached} after the load begins to act; the load is "
-    "sustained for {final}. Both are the designer's assumptions."
+    "Parts that the span carries are attached {attached} after the load begins to act (input "
+    "attached_after); what has deflected by then is not counted for them. The load is sustained "
+    "for {final}."
 )
 _ROOT = (
     "The deflection of the tip includes the rotation of the root by bending of the span behind. "
@@ -70,7 +71,7 @@ def record_limits(
     check = steps.check(clause.LIVE_SMALL if by_live else clause.ATTACHED_SMALL)
     rise = _record_rise(steps, lifting, by_live=by_live)
     steps.line(stages.CAMBER)
-    sheet.note("camber", _CAMBER, title="Camber", clause="9.8.5", basis=FROM_MEMORY)
+    sheet.note("camber", _CAMBER, title="Camber", clause="9.8.2.6", basis=FROM_MEMORY)
     if not cantilever:
         sheet.note("beside", _BESIDE, title="Curvature", basis=COMMON_PRACTICE)
         _record_curvature(steps, ends, local)

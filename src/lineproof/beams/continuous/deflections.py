@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
+from lineproof.beams.continuous.deflection import History
 from lineproof.beams.continuous.deflection_local import LocalLoad
 from lineproof.beams.continuous.deflection_record import (
     RecordedDeflection,
@@ -58,6 +59,7 @@ def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
             entries,
             service_lines(model, service, entries.behind, _earlier(model, span)),
             carries=model.inputs.carries,
+            history=history_of(model),
             lifting=service.lifting,
             arrangement=service.arrangement,
             calculate=span in wanted,
@@ -75,6 +77,11 @@ def _earlier(model: Model, span: int) -> dict[str, Entry]:
             "construction", _CONSTRUCTION, title="Construction stage", clause="9.8.2.3"
         )
         return record_construction(Steps(model.sheet, {}), model, span)
+
+
+def history_of(model: Model) -> History:
+    """Return when parts are attached, as given, and that load is sustained for good."""
+    return History(attached=model.inputs.attached_after)
 
 
 def shares_of(model: Model) -> dict[str, float]:

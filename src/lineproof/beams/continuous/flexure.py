@@ -46,6 +46,8 @@ _MATERIALS = (
     "phi_c", "phi_s", "f_c", "f_y", "E_s", "eps_cu", "lambda_", "alpha_1", "beta_1", "f_r", "E_c",
     "c_c", "a_max", "b_w",
 )  # fmt: skip
+_SHARED = ("M_r", "A_s", "d", "n_o", "A_b", "d_b", "d_bs")
+"""What both faces of a support share where their section is the same."""
 CHOSEN = "chosen: one size for the beam, few second layers, then least mass"
 
 
@@ -97,6 +99,15 @@ def nominally_simple(model: Model, face: Face) -> bool:
     kind = model.inputs.supports[face.support - 1].kind
     simple = kind == "simple" and face.support in (1, model.spans + 1) and not _hung(model, face)
     return simple and not held_in_frame(model, face.support, face.span)
+
+
+def restrained_supports(model: Model) -> frozenset[int]:
+    """Return the end supports whose top bars are designed for an assumed restraint."""
+    return frozenset(
+        face.support
+        for face in faces_of(model)
+        if nominally_simple(model, face) and restraint_moment(model, face.support, face.span) > 0
+    )
 
 
 def _hung(model: Model, face: Face) -> bool:
@@ -340,7 +351,7 @@ def record_hog(model: Model, support: int, top: TopBars | None, pair: CodePair) 
             if hogging(model, face) <= 0 or top is None:
                 _record_no_moment(model, face)
             elif worst and _same_section(model, faces[0], face):
-                _record_other_face(model, face, worst)
+                _record_other_face(model, face, worst, top)
             else:
                 worst = _record_face(model, face, top, pair)
 
@@ -394,9 +405,9 @@ def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict
         steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
         steps.check(minimum.SPREAD)
     cracks_inside(steps, inputs.exposure, (top.web,), TENSION_AREAS[inputs.shape])
-    _take(steps, ("M_r", "A_s", "d", "n_o", "A_b"))
+    _take(steps, _SHARED)
     made = sheet.part_entries
-    return {name: made[name] for name in ("M_r", "A_s", "d", "n_o", "A_b") if name in made}
+    return {name: made[name] for name in _SHARED if name in made}
 
 
 def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:
@@ -428,8 +439,8 @@ def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> No
     steps.lines(SPREAD_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
 
 
-def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry]) -> None:
-    """Record the moment of the milder face against the resistance of the same bars."""
+def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top: TopBars) -> None:
+    """Record the moment of the milder face, its slab and its cracks, for the same bars."""
     steps = _steps(model, face.span, "b_w")
     _record_demand(steps, model, face)
     steps.bind(**dict(worst))
@@ -437,6 +448,7 @@ def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry]) -> 
     if model.inputs.slab:
         steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
         steps.check(minimum.SPREAD)
+    cracks_inside(steps, model.inputs.exposure, (top.web,), TENSION_AREAS[model.inputs.shape])
 
 
 def refuse_unfit(chosen: Mapping[int, Chosen], what: str) -> None:

@@ -87,7 +87,7 @@ class Forces:
         if combinations is None:
             combinations = factored_combinations(kinds)
         if arrangements is None:
-            arrangements = standard_arrangements(len(beam.spans), beyond=True)
+            arrangements = all_placements(len(beam.spans))
         made: Cases = cases_of(solution.rows, combinations, arrangements)
         chosen = tuple((reductions or {}).items())
         return cls(beam, kept, solution, made.names, made.factors, chosen)
@@ -166,6 +166,16 @@ class Forces:
         """Return the factors of a case on the rows of the solution that act in it."""
         numbers = self.factors[row].tolist()
         return {key: f for key, f in zip(self.solution.rows, numbers, strict=True) if f}
+
+
+def all_placements(spans: int) -> tuple[Arrangement, ...]:
+    """Return the arrangements of 9.2.3.1, those beyond them, and every span alone (NBC 4.1.5.3)."""
+    wide = standard_arrangements(spans, beyond=True)
+    alone = (
+        Arrangement(f"live load on span {number}", frozenset({number}))
+        for number in range(1, spans + 1)
+    )
+    return tuple(dict.fromkeys((*wide, *alone)))
 
 
 def other(end: End) -> End:

@@ -42,7 +42,7 @@ from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed, echo
 from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_SLAB
-from lineproof.standards.a23_3.deflection import LIMITS
+from lineproof.standards.a23_3.deflection import DURATIONS, LIMITS
 from lineproof.standards.a23_3.materials import DENSITY_FACTORS
 from lineproof.standards.codes import CodePair
 from lineproof.standards.nbc.loads import USES
@@ -97,6 +97,7 @@ class ContinuousInputs:
     top_bars: tuple[BarLayers | None, ...]
     minimum_rule: str
     carries: str
+    attached_after: str
     sustained: Typed | None
     redistribution: Mapping[int, float]
     stirrup_legs: int
@@ -153,6 +154,7 @@ def read_inputs(
         "shear_method": take("shear_method", one_of, METHODS),
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
         "carries": take("carries", row_of, LIMITS),
+        "attached_after": take("attached_after", row_of, DURATIONS),
         "stirrup_legs": take("stirrup_legs", _read_legs),
         "closed_stirrups": take("closed_stirrups", yes_or_no),
         "stirrups": some("stirrups", _read_rows),

@@ -22,7 +22,6 @@ from lineproof.beams.continuous.resistance import (
     Standing,
     area_for,
     section_depth,
-    shear_depth,
     stand,
 )
 from lineproof.beams.continuous.shear_numbers import (
@@ -98,14 +97,13 @@ def bars_over(
         bars for bars in standing
         if bars.run.face == face and bars.run.start < right and bars.run.end > left
     ]  # fmt: skip
-    cuts = {left, right, (left + right) / 2, *_at_d_v(designed, span)}
+    cuts = {left, right, (left + right) / 2, *designed.outline.faces(span)}
     for bars in own:
         cuts |= {x for x in _marks(bars) if left < x < right}
     made = []
     for start, end in pairwise(sorted(cuts)):
         if end - start > _SHORT:
-            places = [within_d_v(designed, span, x) for x in (start, end)]
-            shares = (_share(bars, places) for bars in own)
+            shares = (_share(bars, (start, end)) for bars in own)
             made.append(BarsOver(start, end, tuple(s for s in shares if s.part > 0)))
     return tuple(made)
 
@@ -147,26 +145,6 @@ def _stretches(
         near_left = over.start + over.end <= left + right
         d = section_depth(designed, face, span, span if near_left else span + 1)
         yield Stretch(over.start - left, over.end - left, over.area, d)
-
-
-def _at_d_v(designed: Designed, span: int) -> tuple[float, float]:
-    """Return the places d_v from both faces of a span, along the beam.
-
-    Nearer to a support the strain may be taken as at d_v from its face (11.3.6.4), so the bars
-    that count are those that count there; what they carry at the support itself is a check of
-    their anchorage.
-    """
-    start, end = designed.outline.faces(span)
-    h = designed.outline.depths[span - 1]
-    d_v = shear_depth(section_depth(designed, "bottom", span), h)
-    half = (end - start) / 2
-    return start + min(d_v, half), end - min(d_v, half)
-
-
-def within_d_v(designed: Designed, span: int, x: float) -> float:
-    """Return the place whose bars count at x: no nearer to a face than d_v."""
-    first, last = _at_d_v(designed, span)
-    return min(max(x, first), last)
 
 
 def span_numbers(

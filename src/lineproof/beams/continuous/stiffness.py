@@ -1,7 +1,7 @@
 """The procedure behind the support moments: direct stiffness, from named numbers to one moment.
 
 What it takes goes by name: spans ``l_1``, ``l_2``, ...; inertias ``I_1``, ... (left out: the same
-in all spans); rotational stiffness of columns over E ``K_2``, ...; uniform loads ``w_D1`` on span 1;
+in all spans); rotational stiffness of columns over E ``K_2``, ...; uniform loads ``w_D1``, ...;
 single loads ``w_x3`` from ``s_x3`` to ``e_x3`` and ``P_x3`` at ``a_x3``, their span being the
 setting ``x3``. The setting ``support_2`` says how support 2 holds: 0 simple, 1 fixed, 2 elastic,
 3 free.

@@ -6,6 +6,7 @@ from collections.abc import Iterable, Iterator, Sequence
 
 import numpy as np
 
+from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.cures_flow import COLUMNS as FAILING_COLUMNS
 from lineproof.beams.continuous.cures_flow import TITLE as FAILING
 from lineproof.beams.continuous.cures_flow import WIDTHS as FAILING_WIDTHS
@@ -56,6 +57,8 @@ SUMMARY = "summary"
 FAILS, DRAWN, TABLES, TAKE_DOWN, REACTIONS, ALONG = 5, 10, 20, 30, 40, 50
 """Places on the summary pages; the schedules stand behind them."""
 PIECES = 100
+INSIDE = 1e-3
+"""How far inside the faces the stirrups at a face count [mm]."""
 CSV_PIECES = 20
 _ENVELOPE = [
     "Span",
@@ -157,14 +160,16 @@ def _record_envelopes(design: Design) -> None:
     moments, shears = [], []
     for span in range(1, model.spans + 1):
         left = design.outline.axes[span - 1]
-        local = np.linspace(0.0, model.lengths[span - 1].value, PIECES + 1)
+        local = _stations(design, span)
         M, V = model.forces.along(span, local)
         spans = np.full(len(local), span)
         bottom, top = (
             provide(design.designed, standing, face, local + left, spans).M_r
             for face in ("bottom", "top")
         )
-        V_r = [met.V_r for met in stretches_at(design.designed, local + left)]
+        start, end = design.outline.faces(span)
+        inside = np.clip(local + left, start + INSIDE, end - INSIDE)
+        V_r = [met.V_r for met in stretches_at(design.designed, inside)]
         x = (local + left).tolist()
         moments.append(
             MomentPiece(span, x, M.max(0).tolist(), M.min(0).tolist(), bottom.tolist(),
@@ -180,6 +185,14 @@ def _record_envelopes(design: Design) -> None:
     if shapes is not None:
         _figure(sheet, "deflected", shapes, ALONG + 2, rests)
     _record_stations(model)
+
+
+def _stations(design: Design, span: int) -> Floats:
+    """Return the stations of the envelopes in a span: even pieces, faces, critical sections."""
+    left, right = design.outline.axes[span - 1 : span + 1]
+    places = (*design.outline.faces(span), *(x for x in _critical(design) if left <= x <= right))
+    even = np.linspace(0.0, right - left, PIECES + 1)
+    return np.unique(np.clip(np.round([*even, *(x - left for x in places)], 6), 0.0, even[-1]))
 
 
 def _critical(design: Design) -> list[float]:

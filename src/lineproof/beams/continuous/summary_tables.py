@@ -118,9 +118,9 @@ def _moment_row(
     name: str, case: str, own: Mapping[str, Entry], bars: Mapping[str, Entry], text: str
 ) -> Row:
     check = own[flexure.STRENGTH.key]
-    needed = printed(own["A_sr"].value, "mm2") if "A_sr" in own else ""
+    needed = own["A_sr"] if "A_sr" in own else bars["A_sr"]
     cells = (
-        name, case, printed(own["M_f"].value, "kN.m"), needed, text,
+        name, case, printed(own["M_f"].value, "kN.m"), printed(needed.value, "mm2"), text,
         printed(bars["A_s"].value, "mm2"), printed(bars["M_r"].value, "kN.m"), ratio_text(check),
     )  # fmt: skip
     return Row(cells, check)
@@ -149,7 +149,9 @@ def shear_rows(design: Design) -> Iterator[Row]:
         yield Row((place, short_case(section.demand.case), spaced, *values, ratio), check)
 
 
-_SERVICE_CHECKS = (crack_control.CRACKS.key, minimum.BY_AREA.key, minimum.BY_CRACKING.key)
+_SERVICE_CHECKS = (
+    crack_control.CRACKS.key, minimum.BY_AREA.key, minimum.BY_CRACKING.key, minimum.WAIVER.key,
+)  # fmt: skip
 
 
 def service_rows(model: Model) -> Iterator[Row]:

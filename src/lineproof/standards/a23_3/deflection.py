@@ -60,7 +60,7 @@ LIMITS = LookupTable(
         "roof or floor with parts attached that deflection spares": {"k_D": "240"},
     },
     "A23.3, Table 9.3",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     basis=FROM_MEMORY,
 )
 
@@ -237,13 +237,13 @@ CONTINUOUS_SPAN = _formula(
 )
 LIVE = _formula(
     "delta_L = delta_DL - delta_D",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Immediate deflection due to live load",
     basis=MECHANICS,
 )
 REST_OF_LIVE = _formula(
     "delta_Lr = delta_DL - delta_sus",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Immediate deflection due to the live load not sustained",
     basis=MECHANICS,
 )
@@ -255,19 +255,19 @@ TOTAL = _formula(
 )
 AFTER_ATTACHMENT = _formula(
     "delta_at = (zeta_s - zeta_sa)*delta_sus + delta_Lr",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Deflection after attachment of the parts carried",
     basis=FROM_MEMORY,
 )
 LARGEST = _formula(
     "delta_max = l_n/k_D",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Largest deflection allowed",
     basis=FROM_MEMORY,
 )
 LIVE_SMALL = _criterion(
     "delta_L <= delta_max",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Deflection due to live load",
     basis=FROM_MEMORY,
     yes="The deflection due to live load stays within the limit.",
@@ -276,7 +276,7 @@ LIVE_SMALL = _criterion(
 )
 ATTACHED_SMALL = _criterion(
     "delta_at <= delta_max",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Deflection after attachment",
     basis=FROM_MEMORY,
     yes="The deflection after attachment stays within the limit.",

@@ -187,19 +187,19 @@ LONG_TERM_ATTACHED_PLAIN = _formula(
 )
 RISE = _formula(
     "delta_up = delta_D - delta_R",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Immediate rise due to live load",
     basis=MECHANICS,
 )
 RISE_ATTACHED = _formula(
     "delta_up = delta_D - delta_R + max((zeta_sa - zeta_s)*delta_sus, 0)",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Rise after attachment of the parts carried",
     basis=FROM_MEMORY,
 )
 RISE_SMALL = _criterion(
     "delta_up <= delta_max",
-    clause="9.8.5.3",
+    clause="9.8.2.6",
     title="Rise due to load on other spans",
     basis=FROM_MEMORY,
     yes="The rise stays within the limit.",
@@ -208,7 +208,7 @@ RISE_SMALL = _criterion(
 )
 CAMBER = _formula(
     "delta_cb = zeta_s*delta_sus",
-    clause="9.8.5",
+    clause="9.8.2.6",
     title="Camber that would level the beam under sustained load in the end",
     basis=MECHANICS,
 )

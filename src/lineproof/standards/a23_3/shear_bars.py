@@ -13,7 +13,7 @@ _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
 
 TENSION_SIDE = _formula(
-    "F_lt = M_f/d_v + max(V_f - 0.5*V_s, 0)*cot(theta)",
+    "F_lt = M_f/d_v + (V_f - 0.5*min(V_s, V_f))*cot(theta)",
     clause="11.3.9.2",
     title="Force in the bars on the tension side",
     basis=SHEAR_2004,
@@ -25,7 +25,7 @@ TENSION_SIDE_CAPPED = _formula(
     basis=FROM_MEMORY,
 )
 COMPRESSION_SIDE = _formula(
-    "F_lc = max((V_f - 0.5*V_s)*cot(theta) - M_f/d_v, 0)",
+    "F_lc = max((V_f - 0.5*min(V_s, V_f))*cot(theta) - M_f/d_v, 0)",
     clause="11.3.9.3",
     title="Force in the bars on the compression side",
     basis=FROM_MEMORY,

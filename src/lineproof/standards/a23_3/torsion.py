@@ -185,7 +185,7 @@ EPS_X = _formula(
     basis=FROM_MEMORY,
 )
 SHEAR_IN_BARS = _formula(
-    "V_le = sqrt(max(V_f - 0.5*V_s, 0)**2 + (0.45*p_h*T_f/(2*A_o))**2)",
+    "V_le = sqrt((V_f - 0.5*min(V_s, V_f))**2 + (0.45*p_h*T_f/(2*A_o))**2)",
     clause="11.3.10.6",
     title="Shear that stands for shear and torsion in the bars",
     basis=FROM_MEMORY,
