@@ -15,7 +15,6 @@ from lineproof.beams.continuous import deflection as numbers
 from lineproof.beams.continuous.cures import Cure, Utilisation, Variable, cures, told
 from lineproof.beams.continuous.deflection_service import STAGES, StageMoments
 from lineproof.errors import UserError
-from lineproof.standards.a23_3 import development
 
 # The base beam of the independent checks; alpha_1 phi_c f'c b = 0.7975*0.65*35*350 = 6350.1 N/mm.
 BASE = {
@@ -93,16 +92,6 @@ def test_yielding() -> None:
     assert checks.yielding(BASE | {"A_s": 4000.0}, c_d=0.4)({}) > 1
 
 
-def test_minimum_steel() -> None:
-    """Independent check no. 6: 621 mm2 for the rectangle; 500 mm2 given, 630 to the next ten."""
-    use = checks.least_steel(BASE | {"b_t": 350.0, "A_s": 500.0})
-    variables = {"A_s": found_by.steel(500, "15M")}
-
-    assert use({}) == pytest.approx(621 / 500, rel=1e-3)
-    assert verified(use, variables) == {"A_s": 630}
-    assert cures(use, variables)[0].text == "630 mm² of bars or more (4-15M)"
-
-
 def test_shear_strength_simplified() -> None:
     """Independent check no. 8: V_c 116.6, V_s 207.8 kN at 225; V_f 350 kN.
 
@@ -131,14 +120,6 @@ def test_shear_strength_general() -> None:
     assert made["A_s"] is not None
 
 
-def test_crushing() -> None:
-    """Independent check no. 8: 958.5 kN; 1000 kN: 35*1.0433 = 36.5 -> 40 MPa, 365.2 -> 370 mm."""
-    use = checks.crushing(BASE | {"V_f": 1000e3})
-    variables = {"f_c": found_by.concrete(35), "b_w": found_by.width(350)}
-
-    assert verified(use, variables) == {"f_c": 40, "b_w": 370}
-
-
 def test_stirrup_spacing() -> None:
     """Independent check no. 8: s_max 337; above 479.2 kN half of it, 168.5 -> 150 mm."""
     use = checks.stirrup_spacing(BASE | {"V_f": 500e3})
@@ -153,51 +134,6 @@ def test_minimum_stirrups() -> None:
     """Independent check no. 8: 644 mm is the spacing for the minimum; 700 given."""
     use = checks.least_stirrups(BASE | {"s": 700.0})
     assert verified(use, {"s": found_by.spacing(700)}) == {"s": 625}
-
-
-CRACKS = BASE | {"c_c": 40.0, "d_bs": 11.3, "d_b": 25.2, "h": 598.9, "n_b": 2.0, "z_max": 25000.0}
-"""d_s = 598.9 - 535 = 63.9 mm, one layer."""
-
-
-def test_cracking() -> None:
-    """z by hand: 240*(63.9*2*63.9*350/n)^(1/3): 27 034 for 2 bars, 23 617 for 3.
-
-    With 4 bars 21 456 N/mm (independent check no. 7).
-    """
-    use = checks.cracking(CRACKS)
-
-    assert use({}) == pytest.approx(27034 / 25000, rel=1e-4)
-    assert use({"n_b": 4}) == pytest.approx(21456 / 25000, rel=1e-4)
-    assert verified(use, {"n_b": found_by.bar_count(2)}) == {"n_b": 3}
-    made = cures(use, {"d_b": found_by.bar_size("25M")})[0]
-    # 20M: 4 bars for 1000 mm2, d_c = 51.3 + 9.75 = 61.05: 240*(61.05*2*61.05*350/4)^(1/3) = 20 814
-    assert (made.value, made.text) == (19.5, "bars of diameter 19.5 mm or less")
-    assert made.utilisation == pytest.approx(20814 / 25000, rel=1e-3)
-
-
-DEVELOPMENT = {
-    "f_c": 35.0, "f_y": 400.0, "d_b": 25.2, "k_1": 1.0, "k_2": 1.0, "k_3": 1.0, "k_4": 1.0,
-}  # fmt: skip
-
-
-def test_development() -> None:
-    """Independent check no. 12: 767 mm; 620 at hand: 35*(767/620)^2 = 53.6 -> 55 MPa, or 20M."""
-    use = checks.developed(DEVELOPMENT | {"l_av": 620.0})
-    variables = {"f_c": found_by.concrete(35), "d_b": found_by.bar_size("25M")}
-
-    assert use({}) == pytest.approx(767 / 620, rel=1e-3)
-    assert verified(use, variables) == {"f_c": 55, "d_b": 19.5}
-    # 0.45*0.8*400/5.916*19.5 = 474.6
-    assert use({"d_b": 19.5}) == pytest.approx(474.6 / 620, rel=1e-3)
-
-
-def test_development_at_zero_moment() -> None:
-    """Independent checks no. 12, 12c: top bars 997, limit 815 mm; 35*(997/815)^2 = 52.4 -> 55."""
-    values = DEVELOPMENT | {"k_1": 1.3, "M_r": 172.8e6, "V_f": 260e3, "l_a": 150.0}
-    use = checks.at_zero_moment(values, development.SHORT)
-
-    assert use({}) == pytest.approx(997 / 814.6, rel=1e-3)
-    assert verified(use, {"f_c": found_by.concrete(35)}) == {"f_c": 55}
 
 
 SECTION = numbers.SpanSection(

@@ -22,17 +22,12 @@ from lineproof.beams.continuous.deflection_service import Stage, StageMoments
 from lineproof.formula import Criterion, Formula
 from lineproof.record.printing import ratio
 from lineproof.standards.a23_3 import (
-    crack_control,
-    cutoff,
-    development,
     flange,
     flexure,
     materials,
-    minimum,
     shear,
     stress_block,
 )
-from lineproof.standards.a23_3.bars import BARS
 
 Values = dict[str, float]
 _ABOVE_NORMAL_RULE = 40.0
@@ -112,16 +107,6 @@ def yielding(given: Mapping[str, float], c_d: float | None = None) -> Utilisatio
     return utilisation
 
 
-def least_steel(given: Mapping[str, float]) -> Utilisation:
-    """Return A_s,min over A_s by area: f_c f_y b_t h A_s."""
-
-    def utilisation(changes: Mapping[str, float]) -> float:
-        values = changed(given, changes)
-        return used(minimum.BY_AREA, follow(values, minimum.A_S_MIN))
-
-    return utilisation
-
-
 def shear_strength(given: Mapping[str, float]) -> Utilisation:
     """Return V_f over V_r with stirrups.
 
@@ -137,16 +122,6 @@ def shear_strength(given: Mapping[str, float]) -> Utilisation:
                 return math.inf
         follow(values, shear.V_C, shear.V_S, shear.V_R_MAX, shear.V_R)
         return used(shear.STRENGTH, values)
-
-    return utilisation
-
-
-def crushing(given: Mapping[str, float]) -> Utilisation:
-    """Return V_f over V_r,max: f_c phi_c b_w h d V_f."""
-
-    def utilisation(changes: Mapping[str, float]) -> float:
-        values = follow(changed(given, changes), shear.D_V, shear.V_R_MAX)
-        return used(shear.WEB_HOLDS, values)
 
     return utilisation
 
@@ -175,78 +150,6 @@ def least_stirrups(given: Mapping[str, float]) -> Utilisation:
         return used(shear.HAS_MINIMUM, values)
 
     return utilisation
-
-
-def cracking(given: Mapping[str, float]) -> Utilisation:
-    """Return z over its limit for one layer: f_y c_c d_bs d_b n_b b_w h d z_max.
-
-    ``n_b`` and ``d_b`` may be changed: smaller bars keep the area in whole bars at least, and lie
-    that much nearer to the face.
-    """
-    area = given["n_b"] * _area(given["d_b"])
-
-    def utilisation(changes: Mapping[str, float]) -> float:
-        values = changed(given, changes)
-        values["A_b"] = _area(values["d_b"])
-        if "d_b" in changes:
-            values["n_b"] = math.ceil(area / values["A_b"] - 1e-9)
-            values["d"] += (given["d_b"] - values["d_b"]) / 2
-        values["A_s"] = values["n_b"] * values["A_b"]
-        follow(
-            values, crack_control.STRESS_ALLOWANCE, crack_control.D_C, crack_control.D_S,
-            crack_control.BAR_COUNT, crack_control.TENSION_AREA, crack_control.Z,
-        )  # fmt: skip
-        return used(crack_control.CRACKS, values)
-
-    return utilisation
-
-
-def _area(diameter: float) -> float:
-    for size in BARS.rows:
-        if BARS.number(size, "d_b") == diameter:
-            return BARS.number(size, "A_b")
-    msg = f"no bar has the diameter {diameter:g} mm"
-    raise ValueError(msg)
-
-
-def developed(given: Mapping[str, float], rule: Formula = development.SHORT) -> Utilisation:
-    """Return l_d over the length available: f_c f_y d_b k_1 k_2 k_3 k_4 l_av, by a rule of 12.2.3.
-
-    A smaller ``d_b`` takes the factor k_4 of its size.
-    """
-
-    def utilisation(changes: Mapping[str, float]) -> float:
-        return used(development.DEVELOPED, _development(given, changes, rule))
-
-    return utilisation
-
-
-def at_zero_moment(
-    given: Mapping[str, float],
-    rule: Formula = development.SHORT,
-    limit: Formula = cutoff.LIMIT,
-) -> Utilisation:
-    """Return l_d over its limit of 12.11.3: as ``developed``, with M_r V_f l_a for l_av.
-
-    The resistance of the bars that continue, M_r, stays as it is.
-    """
-
-    def utilisation(changes: Mapping[str, float]) -> float:
-        values = follow(_development(given, changes, rule), limit)
-        return used(cutoff.DEVELOPED_AT_ZERO_MOMENT, values)
-
-    return utilisation
-
-
-_SMALL_BAR = BARS.number("20M", "d_b")
-
-
-def _development(given: Mapping[str, float], changes: Mapping[str, float], rule: Formula) -> Values:
-    values = changed(given, changes)
-    if "d_b" in changes:
-        values["k_4"] = 0.8 if values["d_b"] <= _SMALL_BAR else 1.0
-        values["A_b"] = _area(values["d_b"])
-    return follow(values, rule, development.L_D)
 
 
 def deflecting(
