@@ -144,5 +144,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     # check no. 12c: 815 without, 1014 with confinement
     "cutoff.DEVELOPED_AT_ZERO_MOMENT": ({"l_d": 767, "l_lim": 815}, {"l_d": 997, "l_lim": 815}),
     "cutoff.TOP_PAST_INFLECTION": ({"A_s": 1500, "A_pi": 500}, {"A_s": 1500, "A_pi": 499}),
+    # 6800/4 = 1700
+    "cutoff.RESTRAINED_END": ({"l_n": 6.8, "l_ext": 1700}, {"l_n": 6.8, "l_ext": 1650}),
     "cutoff.LONG_PAST_INFLECTION": ({"l_pi": 600, "l_ext": 600}, {"l_pi": 600, "l_ext": 599}),
 }

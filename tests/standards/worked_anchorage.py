@@ -190,6 +190,7 @@ CUTOFF = (
     W("cutoff.IN_SUPPORT", {"b_sp": 400, "x_e": 50}, "400/2 - 50 = 150.0"),
     W("cutoff.PAST_CENTRE", {"b_sp": 400, "c_end": 50}, "400/2 - 50 = 150.0", CHECK_12 + "c"),
     W("cutoff.CONTINUING", {"l_d": 767, "d": 535, "d_b": 25.2}, "767 + 535 = 1302"),
+    W("cutoff.PAST_FACE", {"x_e": 2000, "b_sp": 400}, "2000 - 400/2 = 1800.0"),
     W("cutoff.PAST_INFLECTION", {"l_ext": 700, "d": 535, "d_b": 25.2}, "min(700, 535) = 535"),
     W("cutoff.PAST_INFLECTION", {"l_ext": 400, "d": 535, "d_b": 25.2}, "min(400, 535) = 400"),
     W(

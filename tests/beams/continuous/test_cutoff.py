@@ -32,6 +32,7 @@ from lineproof.beams.continuous.detailing_top import groups_of, long_of
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.standards.a23_3 import cutoff as clause
 
+from .flow import analysed, run
 from .laid import beam_of
 
 FOUR = (BarLayer(4, "25M"),)
@@ -198,3 +199,31 @@ def test_top_of_a_span_that_hogs_all_along_has_no_inflection() -> None:
     M, _ = bare.forces.along(2, np.array([1500.0]))
     assert M.min() < 0
     assert no_further_need(Frame.of(designed), "top", 2, "left", 0.0) is None
+
+
+def test_top_bars_at_an_assumed_restraint_reach_a_quarter_of_the_clear_span() -> None:
+    """l_n = 7600 - 200 - 225 = 7175; 7175/4 = 1793.75 past the face, 1993.75 of the axis: 2000."""
+    beam = analysed()
+    run(beam, ("flexure", "shear", "anchorage"))
+    there = [r for r in beam.design.runs if r.face == "top" and r.start < 0]
+    assert {r.place for r in there} == {"web", "overhang"}
+    assert min(r.end for r in there) == 2000.0
+    parts = {part.key: part for part in beam.sheet.parts}
+    entries = parts["anchorage-top-1-right-restraint"].entries
+    assert entries["l_ext"].value == pytest.approx(1800.0)
+    assert entries["restrained-end"]
+    assert entries["development"]
+    assert "anchorage-top-1-right-inflection" not in parts
+    assert "anchorage-top-2-right-inflection" in parts
+
+
+def test_top_bars_shorter_than_a_quarter_of_the_clear_span_fail_at_an_assumed_restraint() -> None:
+    """1950 - 200 = 1750 mm past the face, where 1793.75 are due."""
+    ends = {"start": "-0.15 m", "end": "24.55 m"}
+    top = {"face": "top", "bars": "2-25M"} | ends
+    runs = [{"face": "bottom", "bars": "4-25M"} | ends, top, top | {"end": "1.95 m"}]
+    beam = analysed(bar_runs=[*runs, top | {"bars": "3-25M", "start": "5 m"}])
+    run(beam, ("flexure", "shear", "anchorage"))
+    entries = beam.sheet.entries_of("anchorage-top-1-right-restraint")
+    assert entries["l_ext"].value == pytest.approx(1750.0)
+    assert not entries["restrained-end"]

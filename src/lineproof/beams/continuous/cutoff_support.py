@@ -8,7 +8,7 @@ import numpy as np
 
 from lineproof.beams.bars import BarLayers, bars_text
 from lineproof.beams.continuous.anchorage import bar_of, develop
-from lineproof.beams.continuous.anchorage_record import Writers, plain, record_hook
+from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain, record_hook
 from lineproof.beams.continuous.cutoff import (
     Point,
     distance,
@@ -40,6 +40,12 @@ from lineproof.standards.a23_3 import development, hooks, shear, shear_bars, tor
 
 Hooks = Mapping[tuple[int, str], Entry]
 """Recorded development lengths of hooks by support number and bar size."""
+
+_ASSUMED = (
+    "The analysis takes this end as simple, the top bars are designed for an assumed restraint: "
+    "its moment has no diagram along the span. All top bars, those in the overhangs too, reach a "
+    "quarter of the clear span past the face."
+)
 
 
 def record_section(
@@ -163,6 +169,44 @@ def _longest(site: Site) -> Mapping[str, Entry]:
 
 def _hook(run: BarRun, near: End) -> str:
     return run.hook_start if near == "left" else run.hook_end
+
+
+def assumed_restraint(site: Site) -> bool:
+    """Tell whether the top of a face is in tension by an assumed restraint alone."""
+    side, designed = site.side, site.writers.designed
+    support = support_of(side.span, side.near)
+    if support not in designed.restrained:
+        return False
+    point = no_further_need(site.frame, "top", side.span, side.near, 0.0)
+    return point is not None and point.t <= half_of(designed, side.span, side.near)
+
+
+def record_restrained_end(site: Site) -> None:
+    """Record how far all top bars reach past a face whose restraint is assumed."""
+    side, writers = site.side, site.writers
+    sheet, designed = writers.sheet, writers.designed
+    support = support_of(side.span, side.near)
+    with sheet.part(f"{site.key}-restraint", f"{site.title}: past the face of the support"):
+        sheet.note(
+            "restraint", _ASSUMED, title="Length of the top bars", clause="12.12.1",
+            basis=COMMON_PRACTICE,
+        )  # fmt: skip
+        if not side.runs:
+            none = sheet.given("l_ext", "0 mm", source="no top bars stand at the face")
+            sheet.check(clause.RESTRAINED_END, l_ext=none, l_n=writers.span(side.span)["l_n"])
+            return
+        longest = max(side.runs, key=lambda r: develop(designed.basis, bar_of(designed, r)).l_d)
+        shortest = side.cuts[0].t if side.cuts else side.t_kept
+        width = designed.outline.supports[support - 1].width
+        steps = Steps(sheet, place_of(writers, side.span))
+        steps.bind(
+            b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
+            x_e=sheet.given("x_e", plain(shortest, "mm"), source="as laid, the shortest bars"),
+        )
+        steps.line(clause.PAST_FACE)
+        steps.check(clause.RESTRAINED_END)
+        steps.bind(l_d=site.bar(longest)["l_d"], l_av=steps.entry("l_ext"))
+        steps.check(development.DEVELOPED)
 
 
 def record_past_inflection(site: Site) -> None:

@@ -110,7 +110,10 @@ def _designed(
     runs, bottom_given, top_given = given
     breadths = _breadths(model)
     none = SectionBars((), (), asked.holders)
-    bare = Designed(basis, model.forces, none, pair, breadths=breadths)
+    bare = Designed(
+        basis, model.forces, none, pair, breadths=breadths,
+        restrained=flexure.restrained_supports(model),
+    )  # fmt: skip
     bottom = flexure.choose_bottom(
         model, pair, bottom_given, asked.bottom,
         lambda k, size: k not in asked.anchored or _anchored_span(bare, k, size),
@@ -121,7 +124,7 @@ def _designed(
     flexure.refuse_unfit(bottom, "bottom_bars")
     flexure.refuse_unfit(top, "top_bars")
     bars = _section_bars(model, bottom, top, asked.holders)
-    designed = Designed(basis, model.forces, bars, pair, breadths=breadths)
+    designed = replace(bare, bars=bars)
     if before is not None:
         designed = replace(before.designed, bars=bars, torsion={})
     designed, laid, choice = _laid(model, designed, runs)

@@ -118,7 +118,8 @@ class Designed:
     the beam by support number, where it is known. ``end_cover`` is the concrete outside of the
     bars at the ends of the beam, ``stock`` the longest bar. ``end_forces`` [N] of 11.3.9.5 by
     support number replace those found here. ``torsion`` is known, by span, where torsion counts:
-    there the bottom bars run through.
+    there the bottom bars run through. ``restrained`` holds the numbers of the end supports that are
+    analysed as simple and designed for an assumed restraint.
     """
 
     basis: Basis
@@ -131,6 +132,7 @@ class Designed:
     stock: float = STOCK
     end_forces: Mapping[int, float] = field(default_factory=dict)
     torsion: Mapping[int, TorsionForces] = field(default_factory=dict)
+    restrained: frozenset[int] = frozenset()
 
     @property
     def outline(self) -> BeamOutline:

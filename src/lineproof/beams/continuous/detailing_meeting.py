@@ -5,8 +5,10 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.continuous.cutoff import ceil50
+from lineproof.beams.continuous.anchorage import bar_of, develop
+from lineproof.beams.continuous.cutoff import ceil50, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_length
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import alike
@@ -27,6 +29,25 @@ class Reach:
     def longer(self, by: float) -> Reach:
         """Return a reach further by a length."""
         return Reach(self.long + by, self.short + by, self.through)
+
+
+def with_restraint(
+    designed: Designed, span: int, near: End, groups: Sequence[BarRun], found: Reach
+) -> Reach:
+    """Return a reach that is enough at an end whose restraint is assumed.
+
+    There all bars reach a quarter of the clear span past the face (common practice), and are
+    developed at the face.
+    """
+    if support_of(span, near) not in designed.restrained:
+        return found
+    start, end = designed.outline.faces(span)
+    l_d = max(develop(designed.basis, bar_of(designed, run)).l_d for run in groups)
+    least = ceil50(half_of(designed, span, near) + max((end - start) / 4, l_d))
+    most = designed.outline.lengths[span - 1]
+    return Reach(
+        max(found.long, min(least, most)), max(found.short, min(least, most)), found.through
+    )
 
 
 def met(

@@ -16,11 +16,13 @@ from lineproof.beams.continuous.cutoff_ends import Runs, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_record import Site, record_cuts
 from lineproof.beams.continuous.cutoff_support import (
     Hooks,
+    assumed_restraint,
     record_end_bottom,
     record_end_top,
     record_hooks,
     record_into_support,
     record_past_inflection,
+    record_restrained_end,
     record_section,
     record_zero_moment,
 )
@@ -83,7 +85,10 @@ def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, su
             layers = top_layers(designed, support)
             section = record_section(writers, layers, side.span, "top", title)
         site = Site(writers, frame, lengths, side, section, key, title)
-        record_past_inflection(site)
-        record_cuts(site)
+        if assumed_restraint(site):
+            record_restrained_end(site)
+        else:
+            record_past_inflection(site)
+            record_cuts(site)
         if designed.exterior(support):
             record_end_top(site)

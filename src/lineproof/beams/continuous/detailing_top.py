@@ -35,7 +35,7 @@ from lineproof.beams.continuous.cutoff import (
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
-from lineproof.beams.continuous.detailing_meeting import Reach, met
+from lineproof.beams.continuous.detailing_meeting import Reach, met, with_restraint
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
@@ -239,7 +239,8 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
         long = _meeting(work)
         short = long if whole else short
     long = min(long, _furthest(designed, span, near))
-    return Reach(long, min(short, long), through)
+    found = Reach(long, min(short, long), through)
+    return with_restraint(designed, span, near, groups, found)
 
 
 def _furthest(designed: Designed, span: int, near: End) -> float:

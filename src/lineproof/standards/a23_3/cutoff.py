@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from functools import partial
 
-from lineproof.formula import FROM_MEMORY, criterion, formula
+from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
 from lineproof.standards.references import MECHANICS, SHEAR_2004
@@ -229,13 +229,29 @@ LONG_PAST_INFLECTION = _criterion(
     key="length-past-inflection",
 )
 
+RESTRAINED_END = _criterion(
+    "l_n/4 <= l_ext",
+    clause="12.12.1",
+    title="Top bars at an end with an assumed restraint: a quarter of the clear span",
+    basis=COMMON_PRACTICE,
+    yes="The top bars reach far enough past the face of the support.",
+    no="The top bars do NOT reach far enough past the face of the support.",
+    key="restrained-end",
+)
+PAST_FACE = _formula(
+    "l_ext = x_e - b_sp/2",
+    clause="geometry",
+    title="Extension of the bars past the face of the support",
+    basis=MECHANICS,
+)
+
 FORMULAS = (
     TENSION, TENSION_OTHER_SIDE, EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD,
     PAST_OUTWARD, CONTINUING_INWARD, CONTINUING_OUTWARD, IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION,
-    LIMIT, LIMIT_CONFINED, LENGTH_PAST_INFLECTION,
+    PAST_FACE, LIMIT, LIMIT_CONFINED, LENGTH_PAST_INFLECTION,
 )  # fmt: skip
 CRITERIA = (
     EXTENDED, CONTINUES, SUFFICES, CUT_AT_LOW_SHEAR, CUT_AT_DOUBLE_AREA, CUT_AT_MODERATE_SHEAR,
     INTO_SIMPLE_SUPPORT, INTO_CONTINUOUS_SUPPORT, LENGTH_IN_SUPPORT, ANCHORED_LATERAL,
-    DEVELOPED_AT_ZERO_MOMENT, TOP_PAST_INFLECTION, LONG_PAST_INFLECTION,
+    DEVELOPED_AT_ZERO_MOMENT, TOP_PAST_INFLECTION, LONG_PAST_INFLECTION, RESTRAINED_END,
 )  # fmt: skip

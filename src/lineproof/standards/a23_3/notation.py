@@ -331,7 +331,7 @@ _ROWS = (
     ("A_se", "A", "se", "", "area of bottom bars that enter the support", "mm2"),
     ("l_in", "ℓ", "in", "", "length of bottom bars inside the support", "mm"),
     ("l_a", "ℓ", "a", "", "embedment past the support centre or point of inflection", "mm"),
-    ("l_ext", "ℓ", "ext", "", "length of bars past the point of inflection", "mm"),
+    ("l_ext", "ℓ", "ext", "", "length of bars past the point of inflection or past the face", "mm"),
     ("l_lim", "ℓ", "lim", "", "largest development length of the bars", "mm"),
     ("A_pi", "A", "pi", "", "area of top bars past the point of inflection", "mm2"),
     ("l_pi", "ℓ", "pi", "", "least extension past the point of inflection", "mm"),
