@@ -41,6 +41,12 @@ def sheet_of(calls: tuple[str, ...] = CALLS, **inputs: Any) -> Sheet:
     return run(start(**inputs), calls)
 
 
+def existing(calls: tuple[str, ...] = CALLS, **changes: Any) -> Sheet:
+    """Return the sheet of the existing beam of the notebook with some inputs changed."""
+    sheet = Sheet("B3", "Existing beam", project=PROJECT)
+    return run(beams.continuous_beam(sheet, **(inputs_of(NOTEBOOK) | changes)), calls)
+
+
 def note(sheet: Sheet, part: str, key: str = "") -> str:
     """Return the text of the one cure of a part, or of that of one check."""
     entries = sheet.entries_of(part).items()
@@ -206,6 +212,25 @@ def test_concrete_and_width_told_hold_by_the_simplified_method() -> None:
     assert not check(sheet_of(SHEAR, **fixed, **lighter(b_w=b_w - 10)), entry)
 
 
+def test_steel_told_for_the_tension_side_is_that_of_the_face_in_tension() -> None:
+    """At the column the top is in tension: 6-20M of the top bars; stirrups do not help.
+
+    The depth is that of the bottom bars as well, of which no more would fit: that is not asked.
+    """
+    asked = existing((*FLEXURE, "shear"))
+    text = note(asked, "shear-1-right")
+    bars = [
+        run | ({"bars": "2-20M"} if run["bars"] == "1-20M" else {})
+        for run in inputs_of(NOTEBOOK)["bar_runs"]
+    ]
+    again = existing((*FLEXURE, "shear"), bar_runs=bars)
+
+    assert "(6-20M)" in text
+    assert again.entry("shear-1-right/A_s").value == 1800
+    assert check(again, "shear-1-right/bars-tension-side")
+    assert "no spacing of the stirrups down to 75 mm would do" in text
+
+
 # -- deflection ------------------------------------------------------------------------------
 
 
@@ -227,12 +252,6 @@ def test_the_depth_told_for_a_deflection_holds_in_the_flow() -> None:
 
 
 # -- anchorage -------------------------------------------------------------------------------
-
-
-def existing(calls: tuple[str, ...] = CALLS, **changes: Any) -> Sheet:
-    """Return the sheet of the existing beam of the notebook with some inputs changed."""
-    sheet = Sheet("B3", "Existing beam", project=PROJECT)
-    return run(beams.continuous_beam(sheet, **(inputs_of(NOTEBOOK) | changes)), calls)
 
 
 def test_bars_too_short_are_told_by_how_much() -> None:

@@ -242,9 +242,9 @@ def _steel(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None
     if name == "less A_s":
         return _single("A_s", root, find.less_steel(root.value, size))
     variable = find.steel(root.value, size, _most(root.value))
-    parts = [check.part, *(bound[n].part for n in ("d",) if n in bound)]
-    fits = next((part.entries[_FITS] for part in parts if _FITS in part.entries), None)
-    if fits is None or "d_2" in fits.part.entries:
+    # Elsewhere the depth may be that of other bars: whether more fit is said with the section.
+    fits = check.part.entries.get(_FITS)
+    if fits is None or "d_2" in check.part.entries:
         return _single(name, root, variable)
     return _in_one_layer(name, root, size, fits)
 
