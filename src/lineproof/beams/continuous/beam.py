@@ -249,6 +249,8 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
         rows.append(dict(interface.NOT_COVERED))
     if inputs.shape == "L" and not inputs.torques and inputs.forces_file is None:
         rows.append({"check": "Torsion from the slab: no torque is given", "clause": "11.3.10"})
+    if any(support.carrier == "girder" for support in inputs.supports):
+        rows.append({"check": "Girders turned by the end moments", "clause": "11.3.10"})
     if not inputs.slab:
         rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
     return [*rows]

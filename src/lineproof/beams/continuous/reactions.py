@@ -22,6 +22,10 @@ from lineproof.record import Entry
 
 Scopes = Mapping[Group, Mapping[str, Entry]]
 
+UPLIFT = (
+    "The least reaction of support {support} is negative: the beam lifts off unless it is held "
+    "down. Tie it to the support for this force, or weigh it down; that tie is not checked here."
+)
 PIECE = 12
 """Terms of a sum in one line, where all are too many for one."""
 
@@ -29,7 +33,8 @@ PIECE = 12
 def record_reactions(model: Model, scopes: Scopes) -> None:
     """Record inside the open part every support's reaction by group, then sums and equilibrium.
 
-    For live load the largest reaction has it on those spans only that raise it.
+    For live load the largest reaction has it on those spans only that raise it, the smallest on
+    those that lower it.
     """
     supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
     for group, scope in scopes.items():
@@ -38,6 +43,7 @@ def record_reactions(model: Model, scopes: Scopes) -> None:
     for kind in dict.fromkeys(group.kind for group in scopes if group.kind in LIVE):
         for j in supports:
             _largest(model, kind, scopes, j)
+            _smallest(model, kind, scopes, j)
 
 
 def _reaction(model: Model, group: Group, scope: Mapping[str, Entry], support: int) -> Entry | None:
@@ -124,16 +130,31 @@ def _batched(items: Sequence[str], size: int) -> Iterator[Sequence[str]]:
 
 def _largest(model: Model, kind: str, scopes: Scopes, support: int) -> None:
     """Record the largest reaction of live load, on the spans that raise it."""
-    entries = model.sheet.part_entries
-    raising = [
-        f"R_{support}{group.code}"
-        for group in scopes
-        if group.kind == kind
-        and f"R_{support}{group.code}" in entries
-        and entries[f"R_{support}{group.code}"].value > 0
-    ]
+    raising = _of_kind(model, kind, scopes, support, 1.0)
     if raising:
         title = (
             f"Largest reaction of support {support}, {KINDS[kind]} where it raises it, unfactored"
         )
         model.sheet.line(stated(f"R_{support}{code(kind)} = {' + '.join(raising)}", title=title))
+
+
+def _smallest(model: Model, kind: str, scopes: Scopes, support: int) -> None:
+    """Record the smallest reaction of live load, and with dead load whether the beam lifts off."""
+    sheet, name = model.sheet, f"{support}{code(kind)}"
+    lowering = _of_kind(model, kind, scopes, support, -1.0)
+    if not lowering:
+        return
+    title = f"Smallest reaction of support {support}, {KINDS[kind]} where it lowers it, unfactored"
+    sheet.line(stated(f"R_m{name} = {' + '.join(lowering)}", title=title))
+    title = f"Least factored reaction of support {support}, dead and {KINDS[kind]}"
+    least = sheet.line(stated(f"R_u{name} = 0.9*R_{support}D + 1.5*R_m{name}", title=title,
+                              clause="NBC 4.1.3.2"))  # fmt: skip
+    if least.value < 0:
+        sheet.note(f"uplift-{name}", UPLIFT.format(support=support), title="Uplift")
+
+
+def _of_kind(model: Model, kind: str, scopes: Scopes, support: int, sign: float) -> list[str]:
+    """Return the reactions of a support by live load on single spans that have a sign."""
+    entries = model.sheet.part_entries
+    names = [f"R_{support}{group.code}" for group in scopes if group.kind == kind]
+    return [name for name in names if name in entries and sign * entries[name].value > 0]

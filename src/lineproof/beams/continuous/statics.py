@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.groups import groups_of, moment_name
 from lineproof.beams.continuous.loads import kind_text
 from lineproof.beams.continuous.model import ANALYSIS, Model, near_support
@@ -31,6 +32,7 @@ def record_analysis(model: Model) -> None:
     sheet.notation = sheet.notation | notation(_symbols(model))
     with sheet.part(ANALYSIS, "Analysis: moments at the supports by load type"):
         sheet.note("signs", _SIGNS, title="Signs")
+        sheet.note("cases", _cases_text(model), title="Load cases", clause="NBC 4.1.3.2")
         sheet.note(
             "stiffness", _GROSS if model.inertias else _SAME, title="Stiffness",
             clause="9.2.1", basis="common practice",
@@ -41,6 +43,17 @@ def record_analysis(model: Model) -> None:
             moments.record()
             scopes[group] = moments.scope
         record_reactions(model, scopes)
+
+
+def _cases_text(model: Model) -> str:
+    """List the combinations and the placements of live load that make the load cases."""
+    cases = model.forces.cases
+    factored = dict.fromkeys(case.combination for case in cases)
+    placed = dict.fromkeys(case.arrangement for case in cases if case.arrangement)
+    made = f"{len(cases)} load cases. Combinations: {'; '.join(factored)}."
+    if placed:
+        made += f" Placements, with every combination of live load: {'; '.join(placed)}."
+    return made
 
 
 def _symbols(model: Model) -> Iterator[Symbol]:
@@ -73,6 +86,14 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                 sub,
                 f"reaction of support {support}, {KINDS[group.kind]}, unfactored",
             )
+            if group.kind in LIVE:
+                for letter, which in (("m", "smallest"), ("u", "least factored")):
+                    yield numbered(
+                        f"R_{letter}{support}{code(group.kind)}",
+                        "R",
+                        f"{letter},{sub}",
+                        f"{which} reaction of support {support}, {KINDS[group.kind]}",
+                    )
             if group.span:
                 yield numbered(
                     f"R_{support}{group.code}",

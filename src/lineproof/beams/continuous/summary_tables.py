@@ -200,12 +200,20 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
     kinds = [
         kind for kind in KINDS if any(f"R_{j}{code(kind)}" in entries for j in _supports(model))
     ]
-    columns = ["Support", "On", *(f"R, {KINDS[kind]}, kN" for kind in kinds)]
+    lowered = [
+        kind for kind in kinds if any(f"R_m{j}{code(kind)}" in entries for j in _supports(model))
+    ]
+    columns = [
+        "Support", "On", *(f"R, {KINDS[kind]}, kN" for kind in kinds),
+        *(f"least R, {KINDS[kind]}, kN" for kind in lowered),
+    ]  # fmt: skip
     rows = []
     for j in _supports(model):
         cells, last = [], None
-        for kind in kinds:
-            entry = entries.get(f"R_{j}{code(kind)}")
+        names = [f"R_{j}{code(kind)}" for kind in kinds]
+        names += [f"R_m{j}{code(kind)}" for kind in lowered]
+        for name in names:
+            entry = entries.get(name)
             cells.append("" if entry is None else printed(entry.value, "kN"))
             last = entry if entry is not None else last
         rows.append(Row((str(j), model.inputs.supports[j - 1].carrier, *cells), last))
