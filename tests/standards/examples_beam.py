@@ -17,6 +17,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     # 0.3*0.65*sqrt(35)*350*481.5 = 0.195*5.91608*168.525 = 194.4 kN
     "shear.NEAR_POINT_LOADS": ({**C, "V_pl": 194}, {**C, "V_pl": 195}),
     "shear.STRENGTH": ({"V_f": 260, "V_r": 324.5}, {"V_f": 325, "V_r": 324.5}),
+    "shear.RESTRAINT_STRENGTH": ({"V_fr": 324, "V_r": 324.5}, {"V_fr": 325, "V_r": 324.5}),
     "shear.WEB_HOLDS": ({"V_f": 958, "V_rmax": 958.5}, {"V_f": 959, "V_rmax": 958.5}),
     "shear.NEEDS_STIRRUPS": ({"V_f": 117, "V_c": 116.6}, {"V_f": 116.6, "V_c": 116.6}),
     "shear.DEPTH_NEEDS_STIRRUPS": ({"h": 751}, {"h": 750}),

@@ -139,6 +139,8 @@ def test_top_bars_and_the_minimum_of_the_flange() -> None:
     assert "6-20M" in strength
     assert "6-20M" in waiver
     assert "6-20M" in note(weak, "hog-2-right")
+    (beside,) = [s for s in weak.entries_of("hog-2-right") if s.startswith("cure-")]
+    assert check(weak, f"hog-2-right/{beside}").source.title == "Cure: moment resistance"
     again = sheet_of(FLEXURE, top_bars=[None, "4-20M", None, None])
     # 4 in the web and 1 in each overhang are the six
     assert again.entry("hog-2-left/A_s").value == 1800

@@ -69,3 +69,19 @@ def test_shear_with_forces_line_by_line(changes: Mapping[str, Any]) -> None:
             V_r = section.values["V_r"]
             assert steps.entry("V_r").value == pytest.approx(V_r, rel=1e-8)
     assert not list(faults(record_so_far(beam).data))
+
+
+def test_assumed_restraint_adds_to_shear_and_reaction_and_shortens_the_flange() -> None:
+    """M = w l^2/24 on a girder: M/l = w l/24; the flange takes it over 7600/12 - 200 = 433 mm."""
+    beam = flow.analysed(slab_bars="2 x 15M at 150 mm")
+    flow.run(beam, ("flexure", "shear"))
+    sheet = beam.sheet
+    hog, held = sheet.entries_of("hog-1-right"), sheet.entries_of("shear-1-left-restraint")
+    more = hog["w_f"].value * 7600.0 / 24
+    assert held["V_fr"].value == pytest.approx(sheet.entry("shear-1-left/V_f").value + more)
+    assert held["shear-restraint"]
+    R = largest_reaction(beam.model.forces, 1)[1]
+    assert sheet.entry("support-1/R_f").value == pytest.approx(R + more)
+    l_vf = sheet.entry("interface-hog-1-right/l_vf").value
+    assert l_vf == pytest.approx(7600 / 12 - 200, abs=0.01)
+    assert "shear-1-right-restraint" not in {part.key for part in sheet.parts}

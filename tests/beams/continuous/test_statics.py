@@ -143,3 +143,31 @@ def test_any_beam_is_recorded_as_it_is_solved(changes: dict[str, Any]) -> None:
         assert V_f == pytest.approx(abs(demand.V), rel=EQUAL, abs=1e-2), key
     record = close_anyway(model.sheet)
     assert recompute(record) == []
+
+
+def test_live_load_on_the_far_of_two_equal_spans_lowers_an_end_by_a_sixteenth() -> None:
+    """Two equal spans, one loaded: its unloaded end takes -w l/16 (three-moment equation)."""
+    beam = analysed(spans=["8 m", "8 m"], supports=["wall 400 mm", "column 450 mm", "wall 400 mm"])
+    made = beam.sheet.entries_of("analysis")
+    w_L, w_D = (beam.sheet.entry(f"loads/{name}").value for name in ("w_L1", "w_D1"))
+    least = -w_L * 8000.0 / 16
+    assert made["R_m1L"].value == pytest.approx(least, rel=1e-9)
+    assert made["R_u1L"].value == pytest.approx(0.9 * 3 / 8 * w_D * 8000.0 + 1.5 * least, rel=1e-9)
+    assert "uplift-1L" not in made
+
+
+def test_a_short_span_beside_a_long_one_is_told_to_lift_off() -> None:
+    """Spans of 3 and 9 m: M_B = w (27 + 729)/(8 x 12) = 7.875 w, so R_A = 1.5 w - 2.625 w < 0."""
+    beam = analysed(spans=["3 m", "9 m"], supports=["wall 400 mm", "column 450 mm", "wall 400 mm"])
+    made = beam.sheet.entries_of("analysis")
+    assert made["R_u1L"].value < 0
+    assert "held down" in made["uplift-1L"].source.text
+
+
+def test_the_load_cases_are_listed() -> None:
+    """Three spans: 1.4D once, two combinations with live load on seven placements (9.2.3.1)."""
+    beam = analysed()
+    text = beam.sheet.entries_of("analysis")["cases"].source.text
+    assert "15 load cases" in text
+    assert "0.9D + 1.5L" in text
+    assert "live load on span 3" in text

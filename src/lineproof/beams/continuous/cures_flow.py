@@ -59,7 +59,7 @@ def record_cures(model: Model, part: Part) -> None:
     for check in failing(part):
         said.setdefault(cure_text(model, check), []).append(check.symbol)
     for text, keys in said.items():
-        title = "Cure" if len(said) == 1 else f"Cure: {_titles(part, keys)}"
+        title = f"Cure: {_titles(part, keys)}"  # the note may stand far below the check
         model.sheet.note(f"cure-{keys[-1]}"[:60], text, title=title)
 
 

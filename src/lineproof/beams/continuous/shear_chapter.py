@@ -15,7 +15,7 @@ from lineproof.beams.continuous.bearing import (
 from lineproof.beams.continuous.case_forces import factor_text, record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.flexure import Face as FaceOfSupport
-from lineproof.beams.continuous.flexure import faces_of, hogging
+from lineproof.beams.continuous.flexure import faces_of, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.groups import Group, groups_of
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion
@@ -28,6 +28,7 @@ from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
 from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.resistance_cover import covered
+from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.shear_stretches import Share, bars_over
@@ -40,7 +41,7 @@ from lineproof.errors import UserError
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars
+from lineproof.standards.a23_3 import bars, shear
 from lineproof.standards.a23_3.bars import BARS
 
 STIRRUPS = "stirrups"
@@ -49,6 +50,11 @@ THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
     "far as moment, shear and torsion together ask for, and the bars in the corners of the "
     "stirrups run through the beam."
+)
+
+_RESTRAINT = (
+    "The moment of restraint assumed for the top bars at this end adds M_f/l to the shear and the "
+    "reaction here; at the far support it takes as much away, which is not counted."
 )
 
 
@@ -73,6 +79,10 @@ def record_shear(design: Design) -> None:
     for row in choice.sections:
         for section in row:
             _record_section(design, section, alike | torsion.get(section.span, {}))
+            support = section.span if section.end == "left" else section.span + 1
+            restrained = support in design.designed.restrained
+            if restrained and section.key == f"shear-{section.span}-{section.end}":
+                _record_restraint(model, section)
     _record_supports(design, alike)
     if model.inputs.slab_bars is not None and model.inputs.slab:
         _record_interfaces(design)
@@ -129,6 +139,21 @@ def _record_section(design: Design, section: ShearSection, more: Mapping[str, En
         if model.imported is not None and model.imported.has_torsion(span):
             record_imported_torsion(steps, model.imported, section.demand, section.end)
         record_section(steps, design.stirrups.basis, section)
+
+
+def _record_restraint(model: Model, section: ShearSection) -> None:
+    """Record the shear that the assumed moment of restraint adds, against the resistance."""
+    sheet, span = model.sheet, section.span
+    hog = f"hog-{span}-right" if section.end == "left" else f"hog-{span + 1}-left"
+    title = f"{section.title}: with the restraint assumed"
+    with sheet.part(f"{section.key}-restraint", title):
+        sheet.note("restraint", _RESTRAINT, title="Restraint", basis=COMMON_PRACTICE)
+        own = sheet.entries_of(section.key)
+        place = {"V_f": own["V_f"], "M_f": sheet.entry(f"{hog}/M_f"), "l": model.lengths[span - 1]}
+        steps = Steps(sheet, place)
+        steps.line(shear.WITH_RESTRAINT)
+        if "V_r" in own:  # else the strain out of range fails in the part of the section
+            steps.check(shear.RESTRAINT_STRENGTH, V_r=own["V_r"])
 
 
 def _depth(design: Design, steps: Steps, section: ShearSection) -> Entry:
@@ -205,7 +230,8 @@ def _record_supports(design: Design, alike: Mapping[str, Entry]) -> None:
         title = "hanger stirrups" if hung else "bearing"
         with model.sheet.part(f"support-{number}", f"Support {number}: {title}"):
             steps = Steps(model.sheet, dict(alike))
-            R_f = _record_reaction(steps, model, number)
+            restrained = number in design.designed.restrained
+            R_f = _record_reaction(steps, model, number, restrained=restrained)
             if hung:
                 record_hangers(steps, hangers_needed(design.stirrups.basis, R_f.value))
             else:
@@ -213,14 +239,16 @@ def _record_supports(design: Design, alike: Mapping[str, Entry]) -> None:
                 record_bearing(steps)
 
 
-def _record_reaction(steps: Steps, model: Model, support: int) -> Entry:
-    """Record the largest factored reaction of a support inside the open part, and bind it."""
+def _record_reaction(steps: Steps, model: Model, support: int, *, restrained: bool) -> Entry:
+    """Record the largest factored reaction of a support inside the open part, and bind it.
+
+    With ``restrained``, what the assumed moment of restraint adds is counted.
+    """
     row, R = largest_reaction(model.forces, support)
     sheet, case = steps.sheet, model.forces.cases[row]
+    held = _restraint_at(model, support) if restrained else {}
     if model.inputs.forces_file is not None:
-        made = sheet.given("R_f", f"{R / 1000:.12g} kN", source=f"frame analysis, {case}")
-        steps.bind(R_f=made)
-        return made
+        return _given_reaction(steps, R, f"frame analysis, {case}", held)
     entries = sheet.entries_of(ANALYSIS)
     factors = model.forces.factors_of(row)
     terms: list[str] = []
@@ -232,12 +260,34 @@ def _record_reaction(steps: Steps, model: Model, support: int) -> Entry:
             bound[name] = entries[name]
             terms.append(f"{factor_text(factor)}*{name}")
     if model.inputs.redistribution:
-        made = sheet.given("R_f", f"{R / 1000:.12g} kN", source=f"after redistribution, {case}")
-        steps.bind(R_f=made)
-        return made
+        return _given_reaction(steps, R, f"after redistribution, {case}", held)
+    if held:
+        bound |= held
+        terms.append(_ADDED)
     made = sheet.line(
         stated(f"R_f = {' + '.join(terms)}"), title=f"Largest factored reaction: {case}", **bound
     )
+    steps.bind(R_f=made)
+    return made
+
+
+_ADDED = "M_f/l"
+
+
+def _restraint_at(model: Model, support: int) -> dict[str, Any]:
+    """Return the assumed moment of restraint of an end support and the span it acts on."""
+    span, side = (support, "right") if support == 1 else (support - 1, "left")
+    M_f = model.sheet.entry(f"hog-{support}-{side}/M_f")
+    return {"M_f": M_f, "l": model.lengths[span - 1]}
+
+
+def _given_reaction(steps: Steps, R: float, source: str, held: Mapping[str, Any]) -> Entry:
+    """Record a reaction that is known as a number, and what a restraint adds; bind it."""
+    sheet = steps.sheet
+    made = sheet.given("R_fa" if held else "R_f", f"{R / 1000:.12g} kN", source=source)
+    if held:
+        title = "Largest factored reaction, with the restraint assumed"
+        made = sheet.line(stated(f"R_f = R_fa + {_ADDED}"), title=title, R_fa=made, **held)
     steps.bind(R_f=made)
     return made
 
@@ -276,7 +326,17 @@ def _flange_steps(sheet: Sheet, model: Model, span: int) -> Steps:
 
 
 def _to_inflection(model: Model, support: int, side: str) -> float:
-    """Return the distance from a face to where the moment of its governing case is zero [mm]."""
+    """Return the distance from a face to where the moment of its governing case is zero [mm].
+
+    A moment of restraint w l^2/n that is assumed falls off over M/V = (w l^2/n)/(w l/2) = 2 l/n
+    from the axis; from the face it is half the support shorter, at least half of it.
+    """
+    if support in restrained_supports(model):
+        span = support if side == "right" else support - 1
+        share = SHARES[model.inputs.supports[support - 1].carrier]
+        length: float = 2 * model.lengths[span - 1].value / share
+        half = model.forces.beam.supports[support - 1].width / 2
+        return max(length - half, length / 2)
     demand = model.forces.hog(support, "left" if side == "left" else "right")
     curves = model.forces.solved.solution.span(demand.span)
     zeros = curves.inflections(demand.row)

@@ -93,8 +93,8 @@ class SpanState:
 
     @cached_property
     def required(self) -> Floats:
-        """The 1/s that strength asks for at each column, the largest of all cases."""
-        made: Floats = self.v["needed"].max(axis=0)
+        """The 1/s that strength asks for at each column, restraint of the ends included."""
+        made: Floats = self.v["asked"].max(axis=0)
         return made
 
     @cached_property
@@ -177,10 +177,13 @@ def span_state(
     }  # fmt: skip
     v["T_all"] = _torsion_along(numbers, forces, faces, at)
     v |= resistances(basis, numbers, v)
+    more = np.where(at < sum(faces) / 2, numbers.left.restraint, numbers.right.restraint)
+    legs = value(torsion.LEGS_FOR_SHEAR, v | {"V_f": v["V_f"] + more})
+    v["asked"] = (legs + 2 * v["a_t"]) / basis.A_v
     room = 1e-6
     before, after = at < left.x[:, None] - room, at > right.x[:, None] + room
     before[:, 0] = after[:, 0] = before[:, -1] = after[:, -1] = False
-    for name in ("needed", "s_max", "section", "eps_asked", "V_rmax", "V_c", "V_plain", "V_f",
+    for name in ("needed", "asked", "s_max", "section", "eps_asked", "V_rmax", "V_c", "V_plain", "V_f",
                  "cot", "counts"):  # fmt: skip
         v[name] = np.where(before, v[name][:, :1], np.where(after, v[name][:, -1:], v[name]))
     sides = ("left", *sides, "right")

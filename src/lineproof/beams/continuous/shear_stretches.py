@@ -24,6 +24,7 @@ from lineproof.beams.continuous.resistance import (
     section_depth,
     stand,
 )
+from lineproof.beams.continuous.restraint import restraint_moment
 from lineproof.beams.continuous.shear_numbers import (
     Held,
     Method,
@@ -177,7 +178,10 @@ def _end(model: Model, designed: Designed, span: int, end: End) -> SpanEnd:
     elif typed.carrier == "girder":
         held = "indirect"
     cap = needed_top(model, designed, support) if held == "direct" else None
-    return SpanEnd(held, A_sr=cap)
+    more = 0.0
+    if support in designed.restrained:
+        more = restraint_moment(model, support, span) / designed.outline.lengths[span - 1]
+    return SpanEnd(held, A_sr=cap, restraint=more)
 
 
 def needed_bottom(model: Model, designed: Designed, span: int) -> float | None:

@@ -170,6 +170,8 @@ _ROWS = (
     ("A_le", "A", "ℓe", "", "area of bottom bars for the force at an exterior support", "mm2"),
     ("A_sd", "A", "sd", "", "area of tension bars, counted as far as developed", "mm2"),
     ("R_f", "R", "f", "", "reaction due to factored loads", "kN"),
+    ("R_fa", "R", "fa", "", "reaction due to factored loads, by analysis", "kN"),
+    ("V_fr", "V", "fr", "", "shear due to factored loads, with an assumed restraint", "kN"),
     ("A_hr", "A", "h,req", "", "area of hanger stirrups that the reaction requires", "mm2"),
     ("A_h", "A", "h", "", "area of the legs of the hanger stirrups", "mm2"),
     # torsion

@@ -110,6 +110,21 @@ STRENGTH = _criterion(
     no="The shear resistance is NOT sufficient.",
     key="shear-strength",
 )
+WITH_RESTRAINT = _formula(
+    "V_fr = V_f + M_f/l",
+    clause="statics",
+    title="Shear with the assumed moment of restraint at this end",
+    basis=MECHANICS,
+)
+RESTRAINT_STRENGTH = _criterion(
+    "V_fr <= V_r",
+    clause="11.3.1",
+    title="Shear resistance with the assumed restraint",
+    basis=SHEAR_2004,
+    yes="The shear resistance is sufficient with the restraint.",
+    no="The shear resistance is NOT sufficient with the restraint.",
+    key="shear-restraint",
+)
 WEB_HOLDS = _criterion(
     "V_f <= V_rmax",
     clause="11.3.3",
@@ -359,12 +374,12 @@ THETA = _formula(
 
 FORMULAS = (
     D_V, CRITICAL_AT_D_V, CRITICAL_AT_FACE, STIRRUP_LEGS, BESIDE_CHANGE, BESIDE_END,
-    V_C, V_S, V_R_MAX, V_R, V_R_PLAIN, A_V_MIN, SPACING_MINIMUM, SPACING_REQUIRED, S_MAX,
+    V_C, V_S, V_R_MAX, V_R, V_R_PLAIN, WITH_RESTRAINT, A_V_MIN, SPACING_MINIMUM, SPACING_REQUIRED, S_MAX,
     S_MAX_HALVED, BETA_D_V, BETA_S_ZE, A_G, S_Z, S_Z_LAYERS, S_ZE, EPS_X, BETA_STIRRUPS,
     BETA_GENERAL, THETA,
 )  # fmt: skip
 CRITERIA = (
-    NEAR_POINT_LOADS, STRENGTH, WEB_HOLDS, NEEDS_STIRRUPS, DEPTH_NEEDS_STIRRUPS, HAS_MINIMUM,
+    NEAR_POINT_LOADS, STRENGTH, RESTRAINT_STRENGTH, WEB_HOLDS, NEEDS_STIRRUPS, DEPTH_NEEDS_STIRRUPS, HAS_MINIMUM,
     CLOSER, SPACING, GRADE_FOR_SIMPLIFIED, CONCRETE_FOR_SIMPLIFIED, SHALLOW, SHALLOW_BELOW_SLAB,
     LAYER_COUNTS, STRAIN_IN_RANGE, CLEAR_SPACE, DEPTH_WITHOUT_STIRRUPS,
 )  # fmt: skip
