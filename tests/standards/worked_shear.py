@@ -78,6 +78,8 @@ SHEAR = (
         CHECK_8,
     ),
     W("shear.V_R", {"V_c": 116.65, "V_s": 900, "V_rmax": 958.5}, "min(1016.65, 958.5) = 958.5"),
+    # 120 kN and 41.6 kN.m over 8 m
+    W("shear.WITH_RESTRAINT", {"V_f": 120, "M_f": 41.6, "l": 8}, "120 + 41.6/8 = 125.2"),
     W("shear.V_R_PLAIN", {"V_c": 100.6}, "100.6 = 100.6"),
     W(
         "shear.A_V_MIN",

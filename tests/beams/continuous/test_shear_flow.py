@@ -7,6 +7,7 @@ from typing import Any
 
 import pytest
 
+from lineproof.beams.continuous.bearing import largest_reaction
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.layout import BuiltSupport
 from lineproof.beams.continuous.model import outline_of
@@ -23,7 +24,7 @@ from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.steps import Steps
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
-from .flow import MIXED, analysed, record_so_far
+from .flow import MIXED, analysed, record_so_far, run
 
 
 def end_of(support: BuiltSupport, *, exterior: bool) -> SpanEnd:
@@ -73,8 +74,8 @@ def test_shear_with_forces_line_by_line(changes: Mapping[str, Any]) -> None:
 
 def test_assumed_restraint_adds_to_shear_and_reaction_and_shortens_the_flange() -> None:
     """M = w l^2/24 on a girder: M/l = w l/24; the flange takes it over 7600/12 - 200 = 433 mm."""
-    beam = flow.analysed(slab_bars="2 x 15M at 150 mm")
-    flow.run(beam, ("flexure", "shear"))
+    beam = analysed(slab_bars="2 x 15M at 150 mm")
+    run(beam, ("flexure", "shear"))
     sheet = beam.sheet
     hog, held = sheet.entries_of("hog-1-right"), sheet.entries_of("shear-1-left-restraint")
     more = hog["w_f"].value * 7600.0 / 24

@@ -183,8 +183,8 @@ def span_state(
     room = 1e-6
     before, after = at < left.x[:, None] - room, at > right.x[:, None] + room
     before[:, 0] = after[:, 0] = before[:, -1] = after[:, -1] = False
-    for name in ("needed", "asked", "s_max", "section", "eps_asked", "V_rmax", "V_c", "V_plain", "V_f",
-                 "cot", "counts"):  # fmt: skip
+    for name in ("needed", "asked", "s_max", "section", "eps_asked", "V_rmax", "V_c", "V_plain",
+                 "V_f", "cot", "counts"):  # fmt: skip
         v[name] = np.where(before, v[name][:, :1], np.where(after, v[name][:, -1:], v[name]))
     sides = ("left", *sides, "right")
     cases = forces.cases
