@@ -202,3 +202,13 @@ def test_free_end_asks_nothing_inside_its_cover() -> None:
         BarRun("bottom", 1, 4, "25M", 1850.0, 9150.0, hook_end="90"),
     ])  # fmt: skip
     assert found.holds
+
+
+def test_lapped_bars_never_count_more_than_one_where_the_overlap_is_longer_than_the_lap() -> None:
+    """Overlap of 2000 mm: in its middle each bar counts half, though a lap takes 1000 mm."""
+    runs = [bottom(-150.0, 4500.0), bottom(2500.0, 7150.0)]
+    standing = stand(simple_beam(), runs)
+    x = np.linspace(2500.0, 4500.0, 21)
+    parts = sum(bars.developed(x) for bars in standing)
+    assert parts == pytest.approx(np.ones(21))
+    assert standing[0].developed(np.array([3500.0])) == pytest.approx(0.5)

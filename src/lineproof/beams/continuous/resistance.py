@@ -2,7 +2,8 @@
 
 The stress of a bar rises in proportion to the distance from its end, over its development length
 (with a hook: over that of the hook, from the outside of the hook; at a lap of like bars: over the
-lap, so that two lapped bars count as one). Compression bars are not counted.
+lap, the whole overlap where that is longer, so that two lapped bars never count more than one).
+Compression bars are not counted.
 """
 
 from __future__ import annotations
@@ -147,16 +148,19 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
     """Return the runs with the lengths over which their stress rises."""
     kept = [run for run in runs if run.place != "side face"]
     pairs = level_pairs(designed, kept, lapped)
-    ends, starts = ({pair[side] for pair in pairs} for side in (0, 1))
+    ends = {i: kept[i].end - kept[j].start for i, j in pairs}
+    starts = {j: kept[i].end - kept[j].start for i, j in pairs}
     made = []
     for index, run in enumerate(kept):
         bar = develop(designed.basis, bar_of(designed, run))
         lap_start, lap_end = index in starts, index in ends
+        rise_start = max(bar.lap, starts[index]) if lap_start else bar.l_d
+        rise_end = max(bar.lap, ends[index]) if lap_end else bar.l_d
         made.append(
             Standing(
                 run,
-                _rise(designed, run, run.hook_start, 1, bar.lap if lap_start else bar.l_d),
-                _rise(designed, run, run.hook_end, 0, bar.lap if lap_end else bar.l_d),
+                _rise(designed, run, run.hook_start, 1, rise_start),
+                _rise(designed, run, run.hook_end, 0, rise_end),
                 distance_of(designed, run), lap_start, lap_end,
             )
         )  # fmt: skip

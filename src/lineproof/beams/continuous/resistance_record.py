@@ -45,6 +45,7 @@ from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.record import Entry
+from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import flexure, shear_bars
 
@@ -211,10 +212,22 @@ def _available(
         (x - bars.run.start, bars.rise_start, bars.run.hook_start, bars.lap_start, 1),
         (bars.run.end - x, bars.rise_end, bars.run.hook_end, bars.lap_end, last),
     )
-    length, _, hook, lap, support = min(ends, key=lambda end: end[0] / end[1])
+    length, rise, hook, lap, support = min(ends, key=lambda end: end[0] / end[1])
     if hook:
         return length, hooked[support, bars.run.size]
+    if lap and length < rise and rise > recorded["l_s"].value:
+        return length, _overlap(writers.sheet, rise)
     return length, recorded["l_s" if lap else "l_d"]
+
+
+def _overlap(sheet: Sheet, length: float) -> Entry:
+    """Return the overlap of lapped bars that is longer than the lap, recorded once in a part."""
+    known = [e for k, e in sheet.part_entries.items() if k.startswith("l_lp")]
+    for entry in known:
+        if entry.value == length:
+            return entry
+    name = f"l_lp{len(known) or ''}"
+    return sheet.given(name, plain(length, "mm"), "overlap of the lapped bars", source="as laid")
 
 
 def _record_tension(
