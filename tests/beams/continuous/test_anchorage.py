@@ -8,7 +8,11 @@ import pytest
 
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.anchorage import Bar, available, develop, hook_at, tie_spacing
-from lineproof.beams.continuous.anchorage_record import record_compression, record_lengths
+from lineproof.beams.continuous.anchorage_record import (
+    record_compression,
+    record_hook,
+    record_lengths,
+)
 from lineproof.beams.continuous.detailing_data import Basis, SectionBars, Stirrups, TopBars
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.errors import UserError
@@ -170,3 +174,19 @@ def test_recorded_lengths_are_the_numbers(expression: str, shape: str) -> None:
     l_dc = record_compression(writers, lengths, bar, "anchorage-compression-1")
     assert l_dc.value == pytest.approx(develop(designed.basis, bar).l_dc, rel=1e-9)
     assert list(faults(sheet.close().data)) == []
+
+
+def test_ties_earn_nothing_where_top_bars_stand_in_the_overhangs() -> None:
+    """Check 12b without the factor 0.8: 426 mm; the ties stay."""
+    bare = beam_of(*ONE)
+    top = TopBars((BarLayer(2, "25M"),), 2)
+    spread = replace(bare, bars=SectionBars((), (top, TopBars()), "15M"))
+    assert hook_at(spread, 1, "25M").l_dh == pytest.approx(425.96, abs=0.1)
+    assert hook_at(spread, 1, "25M").tied
+    assert hook_at(spread, 2, "25M").l_dh == pytest.approx(0.8 * 425.96, abs=0.1)
+    assert hook_at(bare, 1, "25M", spread=True).l_dh == pytest.approx(425.96, abs=0.1)
+    sheet = sheet_of(spread)
+    with sheet.part("hook", "Hook"):
+        place = record_hook(writers_of(sheet, spread), {}, 1, "25M")
+        assert place["l_dh"].value == pytest.approx(425.96, abs=0.1)
+        assert place["k_ht"].value == 1.0

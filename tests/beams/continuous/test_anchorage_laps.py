@@ -8,9 +8,20 @@ from itertools import pairwise
 import pytest
 
 from lineproof.beams.bars import BarLayer
-from lineproof.beams.continuous.anchorage_record import record_laps, record_lengths
+from lineproof.beams.continuous.anchorage_record import (
+    record_laps,
+    record_lengths,
+    standing_at_lap,
+)
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars
-from lineproof.beams.continuous.laps import cut_length, has_room, lap_length, room_at_lap, split
+from lineproof.beams.continuous.laps import (
+    cut_length,
+    has_room,
+    lap_between,
+    lap_length,
+    room_at_lap,
+    split,
+)
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.errors import UserError
 
@@ -90,7 +101,8 @@ def test_room_at_a_lap_by_hand() -> None:
 def test_recorded_laps() -> None:
     """Length against what is laid; without room side by side the bars stand one above the other."""
     designed = beam()
-    runs = split(designed, WHOLE, [9000.0])
+    inner = replace(WHOLE, start=4000.0, end=14000.0)
+    runs = (*split(designed, WHOLE, [9000.0]), inner)
     sheet = sheet_of(designed)
     writers = writers_of(sheet, designed)
     record_laps(writers, record_lengths(writers, runs), runs)
@@ -111,3 +123,37 @@ def test_short_laps_fail() -> None:
     writers = writers_of(sheet, designed)
     record_laps(writers, record_lengths(writers, runs), runs)
     assert not entries(sheet.close().data)["anchorage-lap-1/lap-length"]["holds"]
+
+
+def test_bars_of_two_sizes_lap_over_the_development_of_the_thicker() -> None:
+    """15M with 25M at the top.
+
+    Lap of 15M: 1.3 x 0.45 x 1.3 x 0.8 x 400/sqrt(35) x 16 = 658; l_d of 25M:
+    0.45 x 1.3 x 400/sqrt(35) x 25.2 = 997 mm; 900 mm are laid.
+    """
+    thin = BarRun("top", 1, 2, "15M", 0.0, 9500.0)
+    thick = BarRun("top", 1, 2, "25M", 8500.0, 18000.0)
+    assert lap_length(beam(), thin) == 700.0
+    assert lap_between(beam(), thin, thick) == lap_between(beam(), thick, thin) == 1000.0
+    assert lap_between(beam(), thick, thick) == lap_length(beam(), thick) == 1300.0
+    designed = beam()
+    sheet = sheet_of(designed)
+    writers, runs = writers_of(sheet, designed), (replace(thin, end=9400.0), thick)
+    lengths = record_lengths(writers, runs)
+    record_laps(writers, lengths, runs)
+    made = sheet.entries_of("anchorage-lap-1")
+    assert made["l_s"].value == pytest.approx(997, abs=1)
+    assert not made["lap-length"]
+
+
+def test_room_counts_the_bars_that_stand_at_the_lap() -> None:
+    """Three further bars end 1 m before the lap: 202.4 - 25.2 - 2 x 25.2 = 126.8 mm are free."""
+    designed = beam()
+    runs = (*split(designed, WHOLE, [9000.0]), replace(WHOLE, number=3, end=7500.0))
+    assert standing_at_lap(runs, runs[0], runs[1]) == 2
+    sheet = sheet_of(designed)
+    writers = writers_of(sheet, designed)
+    record_laps(writers, record_lengths(writers, runs), runs)
+    made = sheet.entries_of("anchorage-lap-1")
+    assert made["s_cl"].value == pytest.approx(126.8)
+    assert made["lap-room"]

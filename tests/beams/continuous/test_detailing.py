@@ -219,7 +219,8 @@ def test_three_spans_are_as_a_detailer_would_lay_them() -> None:
     assert all(run.end - run.start <= 12000 for run in runs)
     assert {run.hook_start for run in runs if run.face == "top" and run.start == -150.0} == {"90"}
     holders = [run for run in runs if run.serves == "holds the stirrups"]
-    assert len(holders) == 3
+    # Between the inner supports 11350 to 13050 is less than two laps of 1000: no bars there.
+    assert len(holders) == 2
     assert all(any(in_line(a, b) or in_line(b, a) for b in runs) for a in holders)
 
 

@@ -205,9 +205,19 @@ def side_cover(designed: Designed, support: int) -> float:
     return value(cover.COVER_TO_BARS, **given)
 
 
-def hook_at(designed: Designed, support: int, size: str) -> HookLength:
+def in_overhang(designed: Designed, support: int) -> bool:
+    """Tell whether top bars of a support stand in the overhangs, outside the stirrups."""
+    tops = designed.bars.top
+    return bool(tops) and tops[support - 1].overhang > 0
+
+
+def hook_at(
+    designed: Designed, support: int, size: str, *, spread: bool | None = None
+) -> HookLength:
     """Return the hook of a bar at an end of the beam.
 
+    ``spread`` says whether top bars may stand in the overhangs, where they are not chosen yet:
+    outside the stirrups ties earn nothing.
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     s = designed.strengths
@@ -222,11 +232,13 @@ def hook_at(designed: Designed, support: int, size: str) -> HookLength:
     reduced = holds(hooks.SIDE_COVERED, c_side=c_side) and holds(hooks.TAIL_COVERED, c_tail=c_tail)
     reduced = reduced and holds(laps.LAPPABLE, d_b=d_b)
     tied = min(c_side, c_top) < LEAST_HOOK_COVER
+    outside = in_overhang(designed, support) if spread is None else spread
+    ties = TIED_ROW if tied and not outside else UNTIED_ROW
     l_hb = value(basic, d_b=d_b, f_c=s.f_c, f_y=s.f_y)
     l_dh = value(
         hooks.L_DH,
         k_hc=hooks.COVER_FACTORS.number(COVERED_ROW if reduced else UNCOVERED_ROW, "k_hc"),
-        k_ht=hooks.TIE_FACTORS.number(TIED_ROW if tied else UNTIED_ROW, "k_ht"),
+        k_ht=hooks.TIE_FACTORS.number(ties, "k_ht"),
         k_hd=hooks.DENSITY_FACTORS.number(s.density, "k_hd"),
         k_he=hooks.COATING_FACTORS.number("none", "k_he"), l_hb=l_hb, d_b=d_b,
     )  # fmt: skip

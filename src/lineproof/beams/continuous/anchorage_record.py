@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Mapping
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from decimal import Decimal
 
@@ -11,13 +11,13 @@ from lineproof.beams.continuous.anchorage import (
     TOP_ROW,
     Bar,
     bar_of,
-    develop,
+    in_overhang,
     sides_of,
 )
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import level_pairs
+from lineproof.beams.continuous.resistance import PAIR, lap_pairs, level_pairs
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.quantity import Typed
@@ -29,6 +29,16 @@ from lineproof.standards.a23_3.bars import BARS, STIRRUP_BENDS
 
 BY_TABLE = "The development length is that of the table; the general expression stands beside it."
 BY_GENERAL = "The development length is that of the general expression; the table stands beside it."
+
+_OUTSIDE = (
+    "Top bars stand in the overhangs here, outside the stirrups: the factor for ties is not used."
+)
+_CLASS = "Both bars are spliced at one place: class B."
+_CLASS_UNLIKE = (
+    "Both bars are spliced at one place: class B, by the length of the thinner bars, and at least "
+    "the development length of the thicker ones."
+)
+_AT_LAP = "bars of the layer that stand at the middle of the lap, two that are lapped as one"
 
 
 def plain(value: float, unit: str) -> str | Typed:
@@ -240,38 +250,60 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         (kept[i], kept[j])
         for i, j in sorted(level_pairs(designed, kept), key=lambda p: kept[p[1]].start)
     ]
-    seen: dict[tuple[Bar, float], int] = {}
+    seen: set[tuple[Bar, Bar, float, int]] = set()
     for first, second in pairs:
-        thin = min(first, second, key=lambda run: run.diameter)
-        same = (key_of(designed, thin), first.end - second.start)
+        thin, thick = sorted((first, second), key=lambda run: run.diameter)
+        length = first.end - second.start
+        beside = standing_at_lap(kept, first, second)
+        same = (key_of(designed, thin), key_of(designed, thick), length, beside)
         if same not in seen:
-            seen[same] = len(seen) + 1
-            _record_lap(writers, lengths, thin, first, second, seen[same])
+            seen.add(same)
+            _record_lap(writers, lengths, (thin, thick), (length, beside), len(seen))
+
+
+def standing_at_lap(runs: Sequence[BarRun], first: BarRun, second: BarRun) -> int:
+    """Return how many bars stand in the layer at the middle of a lap; lapped ones count once."""
+    x = (first.end + second.start) / 2
+    layer = (first.face, first.layer, first.place)
+    there = [r for r in runs if (r.face, r.layer, r.place) == layer and r.start < x < r.end]
+    twice = sum(min(there[i].number, there[j].number) for i, j in lap_pairs(there))
+    return sum(run.number for run in there) - twice
 
 
 def _record_lap(
-    writers: Writers, lengths: Lengths, thin: BarRun, first: BarRun, second: BarRun, number: int
+    writers: Writers,
+    lengths: Lengths,
+    sizes: tuple[BarRun, BarRun],
+    laid: tuple[float, int],
+    number: int,
 ) -> None:
+    """Record a lap of a thinner with a thicker bar: its length, bars that stand beside."""
     sheet, designed = writers.sheet, writers.designed
-    other = (
-        f" with {second.size if thin is first else first.size}" if first.size != second.size else ""
-    )
-    with sheet.part(f"anchorage-lap-{number}", f"Lap of {first.face} bars {thin.size}{other}"):
-        place = lengths[key_of(designed, thin)]
+    (thin, thick), (length, beside) = sizes, laid
+    unlike = thin.size != thick.size
+    other = f" with {thick.size}" if unlike else ""
+    with sheet.part(f"anchorage-lap-{number}", f"Lap of {thin.face} bars {thin.size}{other}"):
+        place, larger = lengths[key_of(designed, thin)], lengths[key_of(designed, thick)]
         steps = Steps(sheet, place)
         sheet.note(
             "class",
-            "Both bars are spliced at one place: class B, by the length of the thinner bars.",
+            _CLASS_UNLIKE if unlike else _CLASS,
             title="Class of the lap",
             clause="12.15.1",
             basis=COMMON_PRACTICE,
         )
-        steps.check(laps.LAPPABLE)
-        provided = sheet.given("l_lp", plain(first.end - second.start, "mm"), source="as laid")
+        steps.check(laps.LAPPABLE, d_b=larger["d_b"])
+        if unlike:
+            steps.line(laps.TWO_SIZES, l_sn=place["l_s"], l_dk=larger["l_d"])
+        provided = sheet.given("l_lp", plain(length, "mm"), source="as laid")
         steps.bind(l_lp=provided)
         steps.check(laps.LONG_ENOUGH)
+        steps.bind(d_b=larger["d_b"])
+        pair = beside <= PAIR
+        if thin.place == "web":
+            n_b = sheet.given("n_b", str(max(beside, PAIR)), source=_AT_LAP)
+            steps.line(bar_clause.CLEAR, n_b=n_b)
         steps.line(bar_clause.LEAST_CLEAR)
-        pair = develop(designed.basis, key_of(designed, thin)).bar.number <= 2  # noqa: PLR2004
         steps.line(laps.CLEAR_PAIR if pair else laps.CLEAR_CORNERS)
         if not steps.decide(laps.ROOM):
             sheet.note(
@@ -308,7 +340,10 @@ def record_hook(
     face = steps.decide(hooks.FACE_COVERED)
     tied = not (side and face)
     reduced = bool(side and tail) and steps.holds(laps.LAPPABLE)
-    _record_hook_factors(steps, designed, reduced=reduced, tied=tied)
+    spread = in_overhang(designed, support)
+    if tied and spread:
+        sheet.note("outside", _OUTSIDE, title="Ties around the hooks", clause="12.5.3")
+    _record_hook_factors(steps, designed, reduced=reduced, tied=tied and not spread)
     steps.lines(basic, hooks.L_DH)
     if tied:
         spacing = max(25.0, 3 * BARS.number(size, "d_b") // 25 * 25)

@@ -188,7 +188,8 @@ def _text(bars: Bars) -> str:
 
 def _anchored(bare: Designed, support: int, size: str) -> bool:
     """Tell whether bars of a size can be hooked into an end support, if they end there."""
-    return not bare.exterior(support) or fits_hook(bare, support, size)
+    spread = bare.outline.shape != "rectangular"
+    return not bare.exterior(support) or fits_hook(bare, support, size, spread=spread)
 
 
 def _anchored_span(bare: Designed, span: int, size: str) -> bool:

@@ -196,7 +196,7 @@ def _hooked(run: BarRun, support: int) -> str:
     return run.hook_start if support == 1 else run.hook_end
 
 
-def fits_hook(designed: Designed, support: int, size: str) -> bool:
+def fits_hook(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> bool:
     """Tell whether a hook of a size has room in the depth and is developed at the inner face."""
     if not has_hooks(designed):
         return True
@@ -205,7 +205,7 @@ def fits_hook(designed: Designed, support: int, size: str) -> bool:
     d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
     if hook_leg(size, WIDEST_BENDS) > depth - 2 * (outline.cover + d_bs):
         return False
-    return hook_at(designed, support, size).l_dh <= available(designed, support)
+    return hook_at(designed, support, size, spread=spread).l_dh <= available(designed, support)
 
 
 def _with(made: Asked, before: Asked, lack: Lack, bars: SectionBars, free: Open) -> Asked:

@@ -45,7 +45,7 @@ from lineproof.beams.continuous.cutoff import (
 )
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
-from lineproof.beams.continuous.laps import lap_length, split
+from lineproof.beams.continuous.laps import lap_between, split
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.resistance_cover import yield_force
@@ -300,7 +300,9 @@ def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
             )
             continue
         small = min(before, after, key=lambda run: run.diameter)
-        half = lap_length(designed, replace(small, start=axis - 1, end=axis + 1)) / 2
+        large = after if small is before else before
+        met = [replace(run, start=axis - 1, end=axis + 1) for run in (small, large)]
+        half = lap_between(designed, *met) / 2
         made[-1] = replace(made[-1], end=axis + half)
         made.append(replace(after, start=axis - half))
     return made

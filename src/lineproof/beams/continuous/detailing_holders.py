@@ -8,7 +8,7 @@ from lineproof.beams.continuous.cutoff import along, axis_of, ceil50, half_of, s
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
-from lineproof.beams.continuous.laps import lap_length
+from lineproof.beams.continuous.laps import lap_between
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import span_at
 
@@ -17,15 +17,24 @@ def holder(designed: Designed, span: int, near: End, t: float) -> BarRun:
     """Return the bars that hold the stirrups from one support's corner bars to beyond midspan."""
     far = designed.outline.lengths[span - 1]
     bare = BarRun("top", 1, CORNERS, designed.bars.holders, 0.0, 0.0, serves="holds the stirrups")
-    lap = _holder_lap(designed, span)
+    top = designed.bars.top[support_of(span, near) - 1].web
+    axes = designed.outline.axes
+    mate = None
+    if top:
+        start, end = axes[span - 1] - 1, axes[span] + 1
+        mate = replace(bare, size=top[0].size, start=start, end=end)
+    lap = _holder_lap(designed, span, mate)
     x = sorted(along(designed, span, near, at) for at in (t - lap, max(far, t + 2 * lap)))
     return replace(bare, start=x[0], end=x[1])
 
 
-def _holder_lap(designed: Designed, span: int) -> float:
+def _holder_lap(designed: Designed, span: int, mate: BarRun | None) -> float:
+    """Return the lap of the bars that hold the stirrups with the corner bars beside; 0 for none."""
+    if mate is None:
+        return 0.0
     axes = designed.outline.axes
     whole = BarRun("top", 1, CORNERS, designed.bars.holders, axes[span - 1] + 1, axes[span] - 1)
-    return lap_length(designed, whole)
+    return lap_between(designed, whole, mate)
 
 
 def with_holders(designed: Designed, corners: dict[int, BarRun]) -> list[BarRun]:
@@ -64,14 +73,14 @@ def _between(
     designed: Designed, span: int, left: BarRun | None, right: BarRun | None
 ) -> BarRun | None:
     """Return the bars that hold the stirrups of a span; None where the top bars meet."""
-    lap = _holder_lap(designed, span)
+    laps = _holder_lap(designed, span, left), _holder_lap(designed, span, right)
     start = left.end if left else _outer(designed, span, "left")
     end = right.start if right else _outer(designed, span, "right")
-    if left and right and end - start < 2 * lap:
+    if left and right and end - start < 2 * max(laps):
         return None
     return BarRun(
-        "top", 1, CORNERS, designed.bars.holders, start - (lap if left else 0.0),
-        end + (lap if right else 0.0), serves="holds the stirrups",
+        "top", 1, CORNERS, designed.bars.holders, start - laps[0], end + laps[1],
+        serves="holds the stirrups",
     )  # fmt: skip
 
 
@@ -95,10 +104,10 @@ def _serving(first: str, second: str) -> str:
 
 
 def _lapped(designed: Designed, before: BarRun, after: BarRun) -> list[BarRun]:
-    """Return two runs of different bars with the lap of the thinner between them."""
-    thin = min(before, after, key=lambda run: run.diameter)
+    """Return two runs of different bars with their lap between them."""
+    thin, thick = sorted((before, after), key=lambda run: run.diameter)
     span = span_at(designed.outline, (before.end + after.start) / 2)
-    lap = lap_length(designed, replace(thin, start=designed.outline.axes[span - 1] + 1))
+    lap = lap_between(designed, replace(thin, start=designed.outline.axes[span - 1] + 1), thick)
     short = lap - (before.end - after.start)
     if short > 0:
         before = replace(before, end=before.end + ceil50(short / 2))

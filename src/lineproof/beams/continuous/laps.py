@@ -23,6 +23,18 @@ def lap_length(designed: Designed, run: BarRun) -> float:
     return ceil50(develop(designed.basis, bar_of(designed, run)).lap / 2) * 2
 
 
+def lap_between(designed: Designed, first: BarRun, second: BarRun) -> float:
+    """Return the length of a lap of two runs, on the module of the ends.
+
+    Of different sizes: the larger of the lap of the thinner and the development of the thicker.
+    """
+    thin, thick = sorted((first, second), key=lambda run: run.diameter)
+    length = lap_length(designed, thin)
+    if first.size == second.size:
+        return length
+    return max(length, ceil50(develop(designed.basis, bar_of(designed, thick)).l_d / 2) * 2)
+
+
 def cut_length(run: BarRun) -> float:
     """Return the length of a bar before bending, an upper bound."""
     hooks = sum(1 for hook in (run.hook_start, run.hook_end) if hook)

@@ -54,6 +54,12 @@ CLASS_B = _formula(
     basis=DEVELOPMENT_GUIDE,
     numbers={"300": "mm"},
 )
+TWO_SIZES = _formula(
+    "l_s = max(l_sn, l_dk)",
+    clause="12.15",
+    title="Length of a lap of bars of different sizes",
+    basis=FROM_MEMORY,
+)
 COMPRESSION = _formula(
     "l_sc = max(0.073*f_y*d_b, 300)",
     clause="12.16.1",
@@ -109,5 +115,5 @@ ROOM = _criterion(
     key="lap-room",
 )
 
-FORMULAS = (CLASS_A, CLASS_B, COMPRESSION, COMPRESSION_STRONG, CLEAR_CORNERS, CLEAR_PAIR)
+FORMULAS = (CLASS_A, CLASS_B, TWO_SIZES, COMPRESSION, COMPRESSION_STRONG, CLEAR_CORNERS, CLEAR_PAIR)
 CRITERIA = (LAPPABLE, EXCESS_FOR_A, SHARE_FOR_A, CLOSE, LONG_ENOUGH, ROOM)

@@ -323,6 +323,8 @@ _ROWS = (
     ("c_tail", "c", "tail", "", "cover on the tail of the hook", "mm"),
     ("s_tie", "s", "tie", "", "spacing of the ties around the hook", "mm"),
     ("l_s", "ℓ", "s", "", "length of a tension lap", "mm"),
+    ("l_sn", "ℓ", "sn", "", "length of a tension lap of the thinner bars", "mm"),
+    ("l_dk", "ℓ", "dk", "", "development length of the thicker bars", "mm"),
     ("l_sc", "ℓ", "sc", "", "length of a compression lap", "mm"),
     ("r_sp", "r", "sp", "", "share of the bars spliced within one lap length", ""),
     ("s_nc", "s", "nc", "", "distance between bars lapped without contact", "mm"),
