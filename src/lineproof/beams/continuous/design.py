@@ -119,7 +119,11 @@ def _designed(
         lambda k, size: k not in asked.anchored or _anchored_span(bare, k, size),
     )  # fmt: skip
     top = flexure.choose_top(
-        model, pair, top_given, lambda j, size: _anchored(bare, j, size), asked.top
+        model,
+        pair,
+        top_given,
+        lambda j, size, spread: _anchored(bare, j, size, spread=spread),
+        asked.top,
     )
     flexure.refuse_unfit(bottom, "bottom_bars")
     flexure.refuse_unfit(top, "top_bars")
@@ -186,9 +190,8 @@ def _text(bars: Bars) -> str:
     return str(bars) if isinstance(bars, TopBars) else bars_text(bars)
 
 
-def _anchored(bare: Designed, support: int, size: str) -> bool:
+def _anchored(bare: Designed, support: int, size: str, *, spread: bool = False) -> bool:
     """Tell whether bars of a size can be hooked into an end support, if they end there."""
-    spread = bare.outline.shape != "rectangular"
     return not bare.exterior(support) or fits_hook(bare, support, size, spread=spread)
 
 

@@ -187,7 +187,7 @@ def choose_top(
     model: Model,
     pair: CodePair,
     given: Mapping[int, TopBars],
-    anchored: Anchored,
+    anchored: Callable[[int, str, bool], bool],
     least: Mapping[int, float] | None = None,
 ) -> dict[int, Chosen]:
     """Return the top bars of every support that has a moment with the top in tension.
@@ -211,9 +211,11 @@ def choose_top(
     search = top_trial(rules, stirrup)
 
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
-        if not anchored(numbered[section.name], size):
+        found, why = search(section, size)
+        spread = isinstance(found.bars, TopBars) and found.bars.overhang > 0 if found else False
+        if not anchored(numbered[section.name], size, spread):
             return None, "anchorage in the support"
-        return search(section, size)
+        return found, why
 
     found = choose(list(sections.values()), trial, "top_bars")
     return made | dict(zip(sections, found, strict=True))
