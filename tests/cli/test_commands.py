@@ -306,3 +306,13 @@ def test_a_record_changed_by_hand_gives_itself_away(package: Path, capsys: Captu
     assert "B1: flexure/M_r: value stored 465" in capsys.readouterr().err
     assert main(["lines", str(package / "beam.html")]) == 0
     assert capsys.readouterr().err == ""
+
+
+@pytest.mark.parametrize("name", ["floor-beam", "edge-beam"])
+def test_lines_of_a_beam_that_ships_are_its_own(name: str) -> None:
+    """A process of its own: nothing else has registered the procedures of the analysis."""
+    calc = Path(__file__).parents[2] / "calcs" / f"{name}.ipynb"
+    command = [sys.executable, "-m", "lineproof", "lines", str(calc)]
+    made = subprocess.run(command, capture_output=True, text=True, check=False)
+    assert made.returncode == 0, made.stderr
+    assert "analysis/M_2D" in made.stdout or "analysis/M_1D" in made.stdout

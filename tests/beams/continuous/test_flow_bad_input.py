@@ -328,3 +328,37 @@ def test_many_faults_are_told_together() -> None:
         "fire_rating",
     }  # fmt: skip
     assert all("; " in fault for fault in faults)
+
+
+def test_a_weight_that_does_not_go_with_the_density_of_the_concrete() -> None:
+    """2500 kg/m3 x 9.81 m/s2 = 24.5 kN/m3 without steel, 25.6 rounded up with 1 kN/m3 of it."""
+    matches(
+        refused_at_start(gamma_c="2500 kg/m3"),
+        "gamma_w: concrete of 2500 kg/m3 does not weigh the usual 24 kN/m3 with its steel; write "
+        "the unit weight of the reinforced concrete, for example '25.6 kN/m3'",
+    )
+    matches(
+        refused_at_start(gamma_w="20 kN/m3"),
+        "gamma_w: 20 kN/m3 is less than the 23.5 kN/m3 of concrete of 2400 kg/m3 without steel; "
+        "write for example '24.6 kN/m3'",
+    )
+
+
+def test_a_weight_that_is_given_is_the_one_that_loads_the_beam() -> None:
+    """25.6 x 0.14 x 3.1 = 11.1104 kN/m of slab."""
+    beam = start(gamma_c="2500 kg/m3", gamma_w="25.6 kN/m3")
+    beam.loads()
+    assert beam.sheet.entry("loads/w_sl").value == pytest.approx(11.1104, rel=1e-12)
+
+
+def test_columns_that_are_no_columns_or_wider_than_their_support() -> None:
+    matches(
+        refused_at_start(columns={2: 5}),
+        "columns, support 2: '5' is not understood; write '450 mm x 450 mm x 3.6 m' (along the "
+        "beam, across it, height)",
+    )
+    matches(
+        refused_at_start(columns={2: ["900 mm x 450 mm x 3.6 m"]}),
+        "supports, support 2: 'column 450 mm' has columns of 900 mm along the beam; write "
+        "'column 900 mm', or columns of 450 mm",
+    )

@@ -194,6 +194,7 @@ def continuous_beam(
     construction_load: QuantityInput | None = None,
     density: str = "normal",
     gamma_c: QuantityInput = "2400 kg/m3",
+    gamma_w: QuantityInput | None = None,
     aggregate: QuantityInput = "20 mm",
     fire_aggregate: str = "S",
     stirrup: str = "10M",

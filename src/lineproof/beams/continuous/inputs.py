@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
@@ -23,6 +24,7 @@ from lineproof.beams.continuous.typed_beam import (
 )
 from lineproof.beams.continuous.typed_torques import KINDS_OF_TORSION, read_torques
 from lineproof.beams.inputs import (
+    LEAST_NORMAL,
     MINIMUM_RULES,
     SHAPES,
     SNOWED_ON,
@@ -40,6 +42,7 @@ from lineproof.beams.inputs import (
 )
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed, echo
+from lineproof.quantity.units import internal_factor
 from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_SLAB
 from lineproof.standards.a23_3.deflection import DURATIONS, LIMITS
@@ -50,6 +53,7 @@ from lineproof.standards.nbc.loads import USES
 METHODS = ("general", "simplified")
 AREA = Range("kPa", 0, 100, zero=True)
 SHARE = Range("", 0, 1, zero=True)
+UNIT_WEIGHT = Range("kN/m3", 10, 30)
 LEAST_LEGS, MOST_LEGS = 2, 6
 DEEPEST = 2.0
 """Clear span over depth below which a beam is deep (10.7)."""
@@ -57,6 +61,12 @@ SHORTEST = 1.0
 """Clear length over depth below which a cantilever is a bracket: half of a deep beam."""
 SIMPLIFIED_UP_TO = 400.0, 60.0
 """Largest f_y and f_c of the simplified method [MPa] (11.3.6.3)."""
+GRAVITY = 9.81e-3
+"""Weight of 1 kg [kN]."""
+STEEL = 1.0
+"""What reinforcement adds to the weight of plain concrete [kN/m3], common practice."""
+USUAL_DENSITY = 2446.0
+"""Largest density of plain concrete that weighs 24 kN/m3 or less [kg/m3]."""
 STORED = ("storage area", "equipment room", "library stack room")
 """Uses whose companion live load is larger (NBC 4.1.3.2)."""
 
@@ -75,6 +85,7 @@ class ContinuousInputs:
     h_f: Typed | None
     f_c: Typed
     gamma_c: Typed
+    gamma_w: Typed | None
     density: str
     grade: str
     superimposed: Typed
@@ -142,6 +153,7 @@ def read_inputs(
            for name in ("h_f", "live_load", "tributary_width", "floor_weight")},
         **{name: some(name, read_in_range, AREA)
            for name in ("partitions", "snow", "construction_load")},
+        "gamma_w": some("gamma_w", read_in_range, UNIT_WEIGHT),
         "sustained": some("sustained", read_in_range, SHARE),
         "density": take("density", row_of, DENSITY_FACTORS),
         "grade": take("grade", row_of, GRADES),
@@ -176,6 +188,7 @@ def read_inputs(
         }
     fields["forces_file"] = take("forces_csv", read_forces_file, given, fields)
     check_density(fields, given, reader.faults)
+    _check_unit_weight(fields, reader.faults)
     _check_slab(fields, given, reader.faults)
     _check_snow(fields, reader.faults)
     _check_bars_given(fields, reader.faults)
@@ -250,6 +263,26 @@ def _read_bar_list(
             faults.take(error)
     faults.raise_if_any()
     return tuple(made)
+
+
+def _check_unit_weight(fields: Mapping[str, Any], faults: FaultList) -> None:
+    """Refuse a weight of reinforced concrete that does not go with the density of its concrete."""
+    gamma_c, gamma_w = fields["gamma_c"], fields["gamma_w"]
+    if gamma_c is None:
+        return
+    plain = gamma_c.value * GRAVITY
+    likely = f"'{math.ceil(10 * (plain + STEEL)) / 10:g} kN/m3'"
+    if gamma_w is not None:
+        if gamma_w.value < plain * internal_factor("kN/m3"):
+            faults.add(
+                f"gamma_w: {gamma_w.text} is less than the {plain:.1f} kN/m3 of concrete of "
+                f"{gamma_c.text} without steel; write for example {likely}"
+            )
+    elif not LEAST_NORMAL <= gamma_c.value <= USUAL_DENSITY:
+        faults.add(
+            f"gamma_w: concrete of {gamma_c.text} does not weigh the usual 24 kN/m3 with its "
+            f"steel; write the unit weight of the reinforced concrete, for example {likely}"
+        )
 
 
 def _check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:

@@ -179,7 +179,10 @@ def _record_column(sheet: Sheet, name: str, column: TypedColumn) -> str:
 def record_loads(sheet: Sheet, inputs: ContinuousInputs, pair: CodePair) -> None:
     """Record the load take-down: the floor by tributary width, single loads, loads on each span."""
     with sheet.part(LOADS, "Loads"):
-        sheet.lookup("gamma_w", loads.UNIT_WEIGHT, "reinforced, normal density")
+        if inputs.gamma_w is None:
+            sheet.lookup("gamma_w", loads.UNIT_WEIGHT, "reinforced, normal density")
+        else:
+            sheet.given("gamma_w", inputs.gamma_w)
         floor = _record_dead(sheet, inputs)
         live = _record_live(sheet, inputs, pair)
         if inputs.snow is not None:

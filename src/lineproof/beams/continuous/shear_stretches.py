@@ -22,6 +22,7 @@ from lineproof.beams.continuous.resistance import (
     Standing,
     area_for,
     section_depth,
+    shear_depth,
     stand,
 )
 from lineproof.beams.continuous.restraint import restraint_moment
@@ -98,13 +99,15 @@ def bars_over(
         bars for bars in standing
         if bars.run.face == face and bars.run.start < right and bars.run.end > left
     ]  # fmt: skip
-    cuts = {left, right, (left + right) / 2, *designed.outline.faces(span)}
+    first, last = _counted_between(designed, span)
+    cuts = {left, right, (left + right) / 2, *designed.outline.faces(span), first, last}
     for bars in own:
         cuts |= {x for x in _marks(bars) if left < x < right}
     made = []
     for start, end in pairwise(sorted(cuts)):
         if end - start > _SHORT:
-            shares = (_share(bars, (start, end)) for bars in own)
+            places = [min(max(x, first), last) for x in (start, end)]
+            shares = (_share(bars, places) for bars in own)
             made.append(BarsOver(start, end, tuple(s for s in shares if s.part > 0)))
     return tuple(made)
 
@@ -146,6 +149,20 @@ def _stretches(
         near_left = over.start + over.end <= left + right
         d = section_depth(designed, face, span, span if near_left else span + 1)
         yield Stretch(over.start - left, over.end - left, over.area, d)
+
+
+def _counted_between(designed: Designed, span: int) -> tuple[float, float]:
+    """Return between which places of a span the bars count that stand there, along the beam.
+
+    Nearer than d_v to a support that presses from below the strain may be taken as at d_v
+    (11.3.6.4), so the bars count as there; also near a free end, where moment and shear are less
+    than at d_v from it. Where a girder carries the beam from the side they count as at its face.
+    """
+    start, end = designed.outline.faces(span)
+    d = section_depth(designed, "bottom", span)
+    d_v = min(shear_depth(d, designed.outline.depths[span - 1]), (end - start) / 2)
+    near, far = (designed.outline.supports[n].carrier != "girder" for n in (span - 1, span))
+    return start + d_v * near, end - d_v * far
 
 
 def span_numbers(

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 
+from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.flexure import (
     Face,
@@ -204,7 +205,8 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
         kind for kind in kinds if any(f"R_m{j}{code(kind)}" in entries for j in _supports(model))
     ]
     columns = [
-        "Support", "On", *(f"R, {KINDS[kind]}, kN" for kind in kinds),
+        "Support", "On",
+        *(f"{'largest ' * (kind in LIVE)}R, {KINDS[kind]}, kN" for kind in kinds),
         *(f"least R, {KINDS[kind]}, kN" for kind in lowered),
     ]  # fmt: skip
     rows = []

@@ -140,6 +140,12 @@ def _read_support(name: str, given: object, columns: tuple[TypedColumn, ...]) ->
             "the columns out"
         )
     width = read_in_range(name, match[2], WIDTH)
+    for column in columns:
+        if column is not None and width.value != column.depth.value:
+            raise UserError(
+                f"{name}: {echo(given)} has columns of {column.depth.text} along the beam; write "
+                f"'column {column.depth.text}', or columns of {width.text}"
+            )
     kind: SupportKind = "elastic" if columns else "fixed" if match[3] else "simple"
     return TypedSupport(carrier, width, kind, columns)
 
@@ -161,7 +167,10 @@ def _read_columns(
         if not isinstance(number, int) or not 1 <= number <= supports:
             faults.add(f"{name}: the beam has supports 1 to {supports}")
             continue
-        rows = [texts] if isinstance(texts, str) else list(texts or ())
+        if not isinstance(texts, str | list | tuple):
+            faults.add(f"{name}: {echo(texts)} is not understood; write {_COLUMN_SAMPLE}")
+            continue
+        rows = [texts] if isinstance(texts, str) else list(texts)
         if not 1 <= len(rows) <= 2:  # noqa: PLR2004 - one below, one above
             faults.add(f"{name}: {len(rows)} columns; write one or two, below and above")
             continue
