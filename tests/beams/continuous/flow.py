@@ -19,7 +19,7 @@ THREE_SPANS: Mapping[str, Any] = {
 }  # fmt: skip
 MIXED: Mapping[str, Any] = {
     "spans": ["2 m", "7 m", "8 m"],
-    "supports": ["free", "column 450 mm", "column 450 mm", "wall 300 mm, fixed"],
+    "supports": ["free", "column 450 mm", "column 450 mm", "wall 400 mm, fixed"],
     "columns": {3: ["450 mm x 450 mm x 3.6 m", "450 mm x 450 mm x 3.6 m, pinned"]},
     "h": ["500 mm", "620 mm", "700 mm"],
     "loads": [

@@ -278,7 +278,7 @@ def test_the_page_says_where_the_forces_come_from(files: dict[str, Any]) -> None
     record = record_so_far(analysed(**files))
     said = texts(record, "analysis")
     for words in (
-        "file frame.csv, 11 load cases in 3 combinations",
+        "file frame.csv, 15 load cases in 3 combinations",
         "M is positive where the bottom is in tension",
         "positive where the part on the left is held up",
         "M changes by the area of V, within 1 %",

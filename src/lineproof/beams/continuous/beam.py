@@ -142,7 +142,7 @@ class ContinuousBeam:
         refuse_deflections(self.inputs)
         self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
         with self.sheet.chapter(DEFLECTIONS_CALL, closing=self._cure):
-            record_deflections(self.model)
+            record_deflections(self.design)
 
     def anchorage(self) -> None:
         """Record development, hooks, cut-off points, laps, and the cover of all moments by bars."""

@@ -19,6 +19,7 @@ from lineproof.beams.continuous.deflection_service import (
     span_behind,
 )
 from lineproof.beams.continuous.deflection_shapes import deflected_shapes
+from lineproof.beams.continuous.deflection_top import top_recorded
 from lineproof.beams.continuous.deflections import history_of, service_of, top_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.figure_deflection import (
@@ -30,6 +31,7 @@ from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.model import Model
 from lineproof.drawing import Figure
 from lineproof.errors import UserError
+from lineproof.record import Entry
 
 _NAMES = ("immediate, dead and live load", "after attachment", "total, long term")
 
@@ -103,10 +105,13 @@ def _section(model: Model, span: int, behind: Mapping[int, Behind]) -> SpanSecti
         find("h_f").value if model.inputs.slab else 0.0, place["I_g"], place["y_b"],
         find("f_r").value, find("E_c").value, find("E_s").value, midspan,
         _top(model, b_w, span, "right"), _top(model, b_w, span + 1, "left"), free,
-        None if before is None else behind[before],
+        None if before is None else behind[before], _place(b_w, top_recorded(model, span)),
     )  # fmt: skip
 
 
 def _top(model: Model, b_w: float, support: int, side: str) -> Place | None:
-    bound = top_at(model, support, side)
+    return _place(b_w, top_at(model, support, side))
+
+
+def _place(b_w: float, bound: Mapping[str, Entry] | None) -> Place | None:
     return None if bound is None else Place(b_w, bound["d"].value, bound["A_s"].value)

@@ -128,7 +128,7 @@ def record_deflection(
     """
     key = f"deflection-{span.number}"
     steps = Steps(sheet, span.span)
-    if carries != DAMAGED and not calculate and _is_deep(steps, span):
+    if not (calculate or is_calculated(sheet, span, carries)):
         with sheet.part(key, f"Deflection of {span.name}"):
             return RecordedDeflection(_record_depth(steps, span))
     with sheet.part(f"{key}-sections", f"Deflection of {span.name}: cracked sections"):
@@ -152,6 +152,11 @@ def record_deflection(
             local=span.local, ends=tuple(span.ends),
         )  # fmt: skip
     return RecordedDeflection(check, rise, sheet.entries_of(key))
+
+
+def is_calculated(sheet: Sheet, span: SpanEntries, carries: str) -> bool:
+    """Tell whether a span needs a calculation: it carries such parts, or is not deep enough."""
+    return carries == DAMAGED or not _is_deep(Steps(sheet, span.span), span)
 
 
 def named(

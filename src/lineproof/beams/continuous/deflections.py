@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from dataclasses import replace
 
 from lineproof.beams.continuous.deflection import History
 from lineproof.beams.continuous.deflection_local import LocalLoad
 from lineproof.beams.continuous.deflection_record import (
     RecordedDeflection,
     SpanEntries,
+    is_calculated,
     record_deflection,
 )
 from lineproof.beams.continuous.deflection_service import (
@@ -19,6 +21,8 @@ from lineproof.beams.continuous.deflection_service import (
     span_behind,
     sustained_share,
 )
+from lineproof.beams.continuous.deflection_top import hogging_cracks, record_top
+from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model, SingleLoad
@@ -45,8 +49,12 @@ def refuse_deflections(inputs: ContinuousInputs) -> None:
         )
 
 
-def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
-    """Record the deflections of every span; a cantilever after the span behind it."""
+def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
+    """Record the deflections of every span; a cantilever after the span behind it.
+
+    Where hogging cracks a midspan, the top bars that run through it are recorded before.
+    """
+    model = design.model
     r_Ls = _record_share(model)
     order = sorted(range(1, model.spans + 1), key=lambda k: (model.forces.beam.cantilever(k), k))
     made = {}
@@ -54,6 +62,9 @@ def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
     for span in order:
         service = service_of(model, span)
         entries = _entries_of(model, span, r_Ls)
+        asked = span in wanted or is_calculated(model.sheet, entries, model.inputs.carries)
+        if asked and not entries.free and hogging_cracks(model, span, service.stages):
+            entries = replace(entries, top=record_top(design, span))
         made[span] = record_deflection(
             model.sheet,
             entries,
@@ -62,7 +73,7 @@ def record_deflections(model: Model) -> dict[int, RecordedDeflection]:
             history=history_of(model),
             lifting=service.lifting,
             arrangement=service.arrangement,
-            calculate=span in wanted,
+            calculate=asked,
         )
     return made
 
