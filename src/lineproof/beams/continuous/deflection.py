@@ -25,8 +25,8 @@ ATTACHED = "3 months"
 DAMAGED = "roof or floor with parts attached that deflection damages"
 NO_TOP_BARS = (
     "midspan: the moment under service load is hogging and cracks the section, and no top bars run "
-    "through, developed to both sides, with which a deflection could be computed; give bar_runs "
-    "with top bars through midspan, or a deeper beam or stronger concrete, so that it stays whole"
+    "through it, developed to both sides, so no deflection is computed here; write a deeper beam "
+    "or stronger concrete, so that it stays whole, or give bar_runs with top bars through midspan"
 )
 LIVE_LIMITS = (
     "flat roof, nothing attached that deflection damages",

@@ -1,0 +1,144 @@
+"""Top bars at midspan of spans that hog there under service load: which run through, recorded."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+
+from lineproof.beams.continuous.deflection_service import Stage, StageMoments
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.resistance import (
+    Standing,
+    first_layers,
+    in_line,
+    lap_pairs,
+    stand,
+)
+from lineproof.beams.steps import Steps
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import bars as clause
+from lineproof.standards.a23_3 import deflection, deflection_stages
+from lineproof.standards.a23_3.bars import BARS
+
+_SHORT = 1e-6
+_NOTE = (
+    "Under service load the moment at midspan is hogging and cracks the section: the top bars are "
+    "in tension. Counted are those that reach past midspan by their development length to both "
+    "sides; two bars lapped there count as one."
+)
+Group = tuple[int, str, str]
+"""Layer and size of bars, and the size of the first layer, which a second one stands under."""
+
+
+def top_key(span: int) -> str:
+    """Return the key of the part that holds the top bars at midspan of a span."""
+    return f"deflection-{span}-top"
+
+
+def top_recorded(model: Model, span: int) -> Mapping[str, Entry] | None:
+    """Return d and A_s of the top bars at midspan where they are recorded."""
+    found = [part for part in model.sheet.parts if part.key == top_key(span)]
+    return {name: found[0].entries[name] for name in ("d", "A_s")} if found else None
+
+
+def hogging_cracks(model: Model, span: int, moments: Mapping[Stage, StageMoments]) -> bool:
+    """Tell whether a hogging moment at midspan cracks the web at some stage of a span."""
+    f_r, b_w = (model.sheet.find(name).value for name in ("f_r", "b_w"))
+    f_rd = deflection.F_R_DEFLECTION.function(f_r)
+    h = span_place(model.sheet, model.inputs, span)["h"].value
+    least = min(each.M_m for each in moments.values())
+    return -least > deflection_stages.CRACKING_WEB.function(f_rd, b_w, h)
+
+
+def through(standing: Sequence[Standing], x: float) -> tuple[BarRun, ...]:
+    """Return the top bars that run through a place, developed in full to both sides.
+
+    At a lap of like bars each counts up to the middle of the lap, and one of them at the middle.
+    """
+    top = [bars for bars in standing if bars.run.face == "top"]
+    kept = {i for i, bars in enumerate(top) if _whole(bars, x)}
+    for i, j in lap_pairs([bars.run for bars in top], in_line):
+        if i in kept and j in kept:
+            kept.discard(min(i, j, key=lambda n: top[n].run.area))
+    return tuple(top[i].run for i in sorted(kept))
+
+
+def _whole(bars: Standing, x: float) -> bool:
+    sides = (
+        (x - bars.run.start, bars.rise_start, bars.lap_start),
+        (bars.run.end - x, bars.rise_end, bars.lap_end),
+    )
+    return all(
+        length >= (rise / 2 if lap else rise) - _SHORT and length > 0 for length, rise, lap in sides
+    )
+
+
+def record_top(design: Design, span: int) -> Mapping[str, Entry] | None:
+    """Record the top bars that run through midspan of a span; None, and no part, without any."""
+    model, designed = design.model, design.designed
+    axes = designed.outline.axes
+    groups = _grouped(
+        design, through(stand(designed, design.runs), (axes[span - 1] + axes[span]) / 2)
+    )
+    if not groups:
+        return None
+    sheet = model.sheet
+    place = {"h": span_place(sheet, model.inputs, span)["h"], "c_c": sheet.find("c_c")}
+    with sheet.part(top_key(span), f"Top bars at midspan of span {span}"):
+        sheet.note("counted", _NOTE, title="Bars that count", clause="12.1.1")
+        steps = Steps(sheet, place)
+        stirrup = designed.basis.stirrups.size
+        steps.bind(d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
+        _record_groups(steps, groups)
+    made = sheet.entries_of(top_key(span))
+    return {name: made[name] for name in ("d", "A_s")}
+
+
+def _grouped(design: Design, runs: Iterable[BarRun]) -> list[tuple[Group, int]]:
+    found: dict[Group, int] = {}
+    for run in runs:
+        first = run.size
+        if run.layer > 1:
+            layers = first_layers(design.designed, run)
+            first = max(layers, key=lambda layer: layer.diameter).size
+        group = run.layer, run.size, first
+        found[group] = found.get(group, 0) + run.number
+    return sorted(found.items())
+
+
+def _record_groups(steps: Steps, groups: Sequence[tuple[Group, int]]) -> None:
+    """Record area and depth of every group and, of several, of all together as A_s and d."""
+    A = d = None
+    for index, (group, number) in enumerate(groups, start=1):
+        mark = "" if len(groups) == 1 else str(index)
+        own = _record_group(steps, group, number, mark)
+        if A is None or d is None:
+            A, d = own
+            continue
+        last = index == len(groups)
+        pair = {"A_s1": A, "A_s2": own[0], "d_1": d, "d_2": own[1]}
+        areas = {n: pair[n] for n in ("A_s1", "A_s2")}
+        A = steps.line(clause.TOTAL_AREA, "A_s" if last else f"A_sc{index - 1}", **areas)
+        d = steps.line(clause.DEPTH_TWO_LAYERS, "d" if last else f"d_c{index - 1}", **pair)
+
+
+def _record_group(steps: Steps, group: Group, number: int, mark: str) -> tuple[Entry, Entry]:
+    sheet, (layer, size, first) = steps.sheet, group
+    d_b = sheet.lookup(f"d_b{mark}", BARS, size, "d_b", title="diameter of the bar")
+    A_b = sheet.lookup(f"A_b{mark}", BARS, size, "A_b", title="area of one bar")
+    n_b = sheet.given(
+        f"n_{mark}" if mark else "n_b", str(number), "number of bars through midspan",
+        source="as detailed",
+    )  # fmt: skip
+    A_s = steps.line(clause.AREA_OF_BARS, f"A_s{mark}", n_b=n_b, A_b=A_b)
+    symbol = f"d_{mark}" if mark else "d"
+    if layer == 1:
+        formula = clause.DEPTH_FIRST if mark else clause.DEPTH_ONE_LAYER
+        return A_s, steps.line(formula, symbol, d_b=d_b)
+    over = sheet.lookup(f"d_bf{mark}", BARS, first, "d_b", title="diameter of the bar")
+    thicker = max((over, d_b), key=lambda entry: float(entry.value))
+    d_f = steps.line(clause.DEPTH_FIRST, f"d_f{mark}", d_b=over)
+    s_l = steps.line(clause.LAYER_DISTANCE, f"s_l{mark}", d_b=thicker)
+    return A_s, steps.line(clause.DEPTH_SECOND, symbol, d_1=d_f, d_b=over, s_l=s_l, d_b2=d_b)
