@@ -162,3 +162,19 @@ def test_inputs_are_those_of_the_hand_calculation() -> None:
     assert [THREE_SPANS[n] for n in ("h", "b_w", "f_c", "cover")] == [
         "620 mm", "380 mm", "32 MPa", "30 mm",
     ]  # fmt: skip
+
+
+def test_hogging_of_the_construction_stage_counts_at_later_stages() -> None:
+    """It is larger than that of the dead load, so the web is as cracked as by it."""
+    beam = start(spans=list(SHORT_MIDDLE), construction_load="4 kPa")
+    sheet = run(beam, CALLS[:6])
+    earlier = sheet.entries_of("deflection-2-construction")["M_aem"].value
+    dead = sheet.entries_of("deflection-2-dead")
+    assert earlier < dead["M_m"].value < 0
+    assert dead["M_at"].value == -earlier
+    section, moments = bent_of(beam.model, 2, {})
+    made = deflections(section, moments, carries=beam.inputs.carries)
+    assert made.stages["dead"].I_em == pytest.approx(dead["I_em"].value, rel=1e-6)
+    record = close_anyway(sheet)
+    assert recompute(record) == []
+    assert list(faults(record.data)) == []

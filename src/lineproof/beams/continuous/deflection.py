@@ -293,7 +293,7 @@ class _Bent:
 
     def _at_midspan(self, M: float, earlier: float) -> float:
         if M < 0:
-            I_e = self._hogging("top", stages.HOGGING_SIZE.function(M))
+            I_e = self._hogging("top", stages.HOGGING_SIZE.function(min(M, earlier)))
             if I_e is None:
                 raise UserError(NO_TOP_BARS)
             return I_e

@@ -271,7 +271,10 @@ def _at_midspan(steps: Steps, span: SpanEntries) -> Entry:
     M_m = steps.entry("M_m")
     if M_m.value >= 0:
         return _inertia(steps, "m", "M_m", "at midspan", I_g=steps.entry("I_g"))
-    M_at = named(steps, stages.HOGGING_SIZE, "M_at", "", M_s=M_m)
+    before, title = steps.place.get("M_aem"), ""
+    if before is not None and before.value < M_m.value:
+        M_m, title = before, "Size of the hogging moment of the earlier stage, which is larger"
+    M_at = named(steps, stages.HOGGING_SIZE, "M_at", title, M_s=M_m)
     if span.top is None and M_at.value > steps.entry("M_crdn").value:
         raise UserError(f"span {span.number}, {NO_TOP_BARS}")
     return _inertia(steps, "t", "M_at", "hogging at midspan", gives="I_em")

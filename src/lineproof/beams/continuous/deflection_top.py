@@ -43,13 +43,20 @@ def top_recorded(model: Model, span: int) -> Mapping[str, Entry] | None:
     return {name: found[0].entries[name] for name in ("d", "A_s")} if found else None
 
 
-def hogging_cracks(model: Model, span: int, moments: Mapping[Stage, StageMoments]) -> bool:
-    """Tell whether a hogging moment at midspan cracks the web at some stage of a span."""
+def hogging_cracks(
+    model: Model, span: int, moments: Mapping[Stage, StageMoments], earlier: float
+) -> bool:
+    """Tell whether hogging at midspan cracks the web at some stage; ``earlier`` moment included.
+
+    That of an earlier stage counts where the span hogs at midspan at a later one.
+    """
     f_r, b_w = (model.sheet.find(name).value for name in ("f_r", "b_w"))
     f_rd = deflection.F_R_DEFLECTION.function(f_r)
     h = span_place(model.sheet, model.inputs, span)["h"].value
     least = min(each.M_m for each in moments.values())
-    return -least > deflection_stages.CRACKING_WEB.function(f_rd, b_w, h)
+    if least >= 0:
+        return False
+    return -min(least, earlier) > deflection_stages.CRACKING_WEB.function(f_rd, b_w, h)
 
 
 def through(standing: Sequence[Standing], x: float) -> tuple[BarRun, ...]:

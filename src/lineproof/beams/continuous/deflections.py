@@ -63,12 +63,14 @@ def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
         service = service_of(model, span)
         entries = _entries_of(model, span, r_Ls)
         asked = span in wanted or is_calculated(model.sheet, entries, model.inputs.carries)
-        if asked and not entries.free and hogging_cracks(model, span, service.stages):
+        earlier = _earlier(model, span)
+        before = earlier["M_aem"].value if "M_aem" in earlier else 0.0
+        if asked and not entries.free and hogging_cracks(model, span, service.stages, before):
             entries = replace(entries, top=record_top(design, span))
         made[span] = record_deflection(
             model.sheet,
             entries,
-            service_lines(model, service, entries.behind, _earlier(model, span)),
+            service_lines(model, service, entries.behind, earlier),
             carries=model.inputs.carries,
             history=history_of(model),
             lifting=service.lifting,
