@@ -21,6 +21,8 @@ from lineproof.record.record import Record
 
 SAME = 1e-9
 """Relative difference up to which two computed floats count as the same."""
+REMAINDER = 1e-11
+"""Part of the larger side of a comparison up to which the smaller is the rounding of a sum."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -37,9 +39,9 @@ class Difference:
         return f"{self.id}: {self.what} stored {self.stored}, recomputed {self.recomputed}"
 
 
-def close(first: float, second: float, size: float = 0.0) -> bool:
-    """Tell whether two floats, or terms of a sum of that size, are the same but for last bits."""
-    return abs(first - second) <= SAME * max(abs(first), abs(second), size, 1e-12)
+def close(first: float, second: float, rounding: float = 0.0) -> bool:
+    """Tell whether two floats are the same but for the last bits, or differ by no more rounding."""
+    return abs(first - second) <= max(SAME * max(abs(first), abs(second), 1e-12), rounding)
 
 
 def recompute(record: Record) -> list[Difference]:
@@ -149,10 +151,10 @@ def _criterion(
     left = _evaluate(left_tree, test["args"], values)
     right = _evaluate(right_tree, test["args"], values)
     scale = internal_factor(test["unit"])
-    # A remainder next to zero counts against what it is compared with: its bits are rounding.
-    size = max(abs(left), abs(right))
+    # What is left of a sum in equilibrium is rounding: it counts against what it is compared with.
+    rounding = REMAINDER * max(abs(left), abs(right))
     for what, stored, value in (("left", test["left"], left), ("right", test["right"], right)):
-        if not close(_stored(stored, test["unit"]), value, size):
+        if not close(_stored(stored, test["unit"]), value, rounding):
             yield Difference(entry_id, f"{what} side", f"{stored:.10g}", f"{value / scale:.10g}")
     if _truth(sign, left, right) not in (None, test["holds"]):
         yield Difference(entry_id, "truth", str(test["holds"]), str(not test["holds"]))

@@ -132,7 +132,7 @@ def test_no_top_bars_are_better() -> None:
     """Three spans: one size for all supports, least mass (a third of each span beside)."""
     beam = analysed()
     model = beam.model
-    chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __: True)
+    chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
     lengths = {1: 7.6, 2: 7.6 + 9.2, 3: 9.2 + 7.6, 4: 7.6}
     best = {support: _best_top(beam, support) for support in chosen}
     totals = {
