@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from functools import lru_cache
 from typing import Any, Literal
 
+from lineproof.beams.continuous import numbers
 from lineproof.beams.continuous.detailing_data import Basis, Designed
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.formula import Criterion, Formula
@@ -17,19 +18,18 @@ Place = Literal["web", "overhang", "side face"]
 TOP_ROW, OTHER_ROW = "more than 300 mm of fresh concrete below", "other"
 COVERED_ROW, UNCOVERED_ROW = "side cover 60 mm and tail cover 50 mm or more", "less"
 TIED_ROW, UNTIED_ROW = "ties at 3 bar diameters or closer", "none"
-LEAST_HOOK_COVER = 60.0
 TIE_STEP = 5.0
+"""Step of the spacing of ties around hooks [mm]."""
 
 
 def value(formula: Formula, **given: float) -> float:
     """Return the value of a catalogue formula in N, mm, MPa."""
-    return formula.function(*[given[name] for name in formula.names])
+    return numbers.value(formula, given)
 
 
 def holds(test: Criterion, **given: float) -> bool:
     """Tell whether a catalogue criterion holds."""
-    numbers = [given[name] for name in test.names]
-    return test.holds(*(side(*numbers) for side in test.functions))
+    return numbers.holds(test, given)
 
 
 @dataclass(frozen=True, slots=True)
@@ -66,7 +66,6 @@ class Development:
     l_d0: float
     l_d: float
     lap: float
-    l_dc: float
 
 
 def sides_of(outline: BeamOutline) -> int:
@@ -97,11 +96,9 @@ def develop(basis: Basis, bar: Bar) -> Development:
     if bar.place == "web":
         general = _general(basis, bar, s_c, d_bs, common)
     l_d0 = general if basis.expression == "general" and general else table
-    basic = value(development.COMPRESSION_BASIC, d_b=d_b, f_y=s.f_y, f_c=s.f_c)
     return Development(
         bar, s_c, top, short, table, general, l_d0,
         value(development.L_D, l_d0=l_d0), value(laps.CLASS_B, l_d0=l_d0),
-        value(development.COMPRESSION, l_db=basic),
     )  # fmt: skip
 
 
@@ -229,9 +226,9 @@ def hook_at(
         cover.COVER_TO_BARS, c_c=designed.outline.cover,
         d_bs=BARS.number(designed.basis.stirrups.size, "d_b"),
     )  # fmt: skip
-    reduced = holds(hooks.SIDE_COVERED, c_side=c_side) and holds(hooks.TAIL_COVERED, c_tail=c_tail)
-    reduced = reduced and holds(laps.LAPPABLE, d_b=d_b)
-    tied = min(c_side, c_top) < LEAST_HOOK_COVER
+    side = holds(hooks.SIDE_COVERED, c_side=c_side)
+    reduced = side and holds(hooks.TAIL_COVERED, c_tail=c_tail) and holds(laps.LAPPABLE, d_b=d_b)
+    tied = not (side and holds(hooks.FACE_COVERED, c_top=c_top))
     outside = in_overhang(designed, support) if spread is None else spread
     ties = TIED_ROW if tied and not outside else UNTIED_ROW
     l_hb = value(basic, d_b=d_b, f_c=s.f_c, f_y=s.f_y)

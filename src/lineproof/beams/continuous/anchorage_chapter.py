@@ -4,20 +4,17 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
-from lineproof.beams.continuous.anchorage_record import Writers, plain
+from lineproof.beams.continuous.anchorage_record import Writers, record_stretch
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.detailing_data import ShearStretch
 from lineproof.beams.continuous.detailing_record import record_detailing
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
-from lineproof.beams.continuous.resistance_record import COVERAGE
 from lineproof.beams.continuous.torsion_face import record_torsion_at_face
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.record import Entry
-
-__all__ = ["COVERAGE", "record_anchorage"]
 
 
 def record_anchorage(design: Design) -> None:
@@ -43,11 +40,6 @@ def record_anchorage(design: Design) -> None:
 
 def _record_shear(steps: Steps, stretch: ShearStretch) -> None:
     """Record what the stirrups of the shear chapter resist over a stretch, rounded down."""
-    sheet = steps.sheet
     place = f"{stretch.start / 1000:.2f} to {stretch.end / 1000:.2f} m from support 1"
     source = f"shear chapter, smallest of each over all load cases, {place}"
-    steps.bind(
-        V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source=source),
-        V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source=source),
-        theta=sheet.given("theta", plain(stretch.theta, "deg"), source=source),
-    )
+    record_stretch(steps, stretch, source)

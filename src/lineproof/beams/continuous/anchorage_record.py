@@ -7,11 +7,16 @@ from dataclasses import dataclass, field
 from decimal import Decimal
 
 from lineproof.beams.continuous.anchorage import (
+    COVERED_ROW,
     OTHER_ROW,
+    TIED_ROW,
     TOP_ROW,
+    UNCOVERED_ROW,
+    UNTIED_ROW,
     Bar,
     bar_of,
     in_overhang,
+    room_beside,
     sides_of,
 )
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
@@ -59,13 +64,13 @@ def forces_as_given(steps: Steps, demand: Demand, near: End, x: Entry | None = N
     steps.bind(M_f=M_f, V_f=V_f)
 
 
-def shear_as_given(steps: Steps, stretch: ShearStretch) -> None:
-    """Record the shear resistance of a stretch as given numbers."""
+def record_stretch(steps: Steps, stretch: ShearStretch, source: str = "shear") -> None:
+    """Record V_r, V_s and theta of a stretch as given numbers from ``source``, and bind them."""
     sheet = steps.sheet
     steps.bind(
-        V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source="shear"),
-        V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source="shear"),
-        theta=sheet.given("theta", plain(stretch.theta, "deg"), source="shear"),
+        V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source=source),
+        V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source=source),
+        theta=sheet.given("theta", plain(stretch.theta, "deg"), source=source),
     )
 
 
@@ -82,7 +87,7 @@ class Writers:
     designed: Designed
     span: Callable[[int], Mapping[str, Entry]]
     forces: Callable[[Steps, Demand, End, Entry | None], None] = forces_as_given
-    shear: Callable[[Steps, ShearStretch], None] = shear_as_given
+    shear: Callable[[Steps, ShearStretch], None] = record_stretch
     sizes: Mapping[str, Entry] = field(default_factory=dict)
     """Diameters and areas that are recorded already, ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
     torsion: Callable[[Steps, Demand, End], None] | None = None
@@ -99,18 +104,13 @@ def place_of(writers: Writers, span: int) -> dict[str, Entry]:
     return {name: entries[name] for name in names if name in entries}
 
 
-def key_of(designed: Designed, run: BarRun) -> Bar:
-    """Return the bar of a run as it is recorded."""
-    return bar_of(designed, run)
-
-
 def record_lengths(writers: Writers, runs: Iterable[BarRun]) -> Lengths:
     """Record the development length of every kind of bar in a part of its own."""
     designed = writers.designed
     made: dict[Bar, Mapping[str, Entry]] = {}
     kept = [run for run in runs if run.place != "side face"]
     for run in sorted(kept, key=lambda r: (r.face, r.place, r.size)):
-        bar = key_of(designed, run)
+        bar = bar_of(designed, run)
         if bar not in made:
             made[bar] = _record_bar(writers, bar, len(made) + 1)
     return made
@@ -142,14 +142,7 @@ def _deep(writers: Writers, bar: Bar) -> dict[str, Entry]:
     outline = writers.designed.outline
     spans = [k for k, h in enumerate(outline.depths, start=1) if h == bar.h]
     if bar.place == "overhang" and bar.room > 0:
-        sides = sides_of(outline)
-        spans = sorted(
-            spans,
-            key=lambda k: abs(
-                min((outline.widths[k - 1] - outline.b_w) / sides, outline.lengths[k - 1] / 20)
-                - bar.room
-            ),
-        )
+        spans.sort(key=lambda k: abs(room_beside(writers.designed, [k]) - bar.room))
     return place_of(writers, spans[0])
 
 
@@ -230,19 +223,6 @@ def _record_table(steps: Steps, designed: Designed, bar: Bar, symbol: str) -> No
     steps.line(development.SHORT if covered and apart else development.LONG, symbol)
 
 
-def record_compression(writers: Writers, lengths: Lengths, bar: Bar, key: str) -> Entry:
-    """Record the development length of bars that are counted in compression."""
-    with writers.sheet.part(key, f"Development in compression of {bar.face} bars {bar.size}"):
-        steps = Steps(writers.sheet, lengths[bar])
-        steps.line(development.COMPRESSION_BASIC)
-        return steps.line(development.COMPRESSION)
-
-
-def length_entry(writers: Writers, lengths: Lengths, run: BarRun) -> Entry:
-    """Return the recorded development length of a run."""
-    return lengths[key_of(writers.designed, run)]["l_d"]
-
-
 def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
     """Record every kind of lap in a part: size, length against what is laid, room for concrete."""
     designed, kept = writers.designed, tuple(runs)
@@ -255,7 +235,7 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         thin, thick = sorted((first, second), key=lambda run: run.diameter)
         length = first.end - second.start
         beside = standing_at_lap(kept, first, second)
-        same = (key_of(designed, thin), key_of(designed, thick), length, beside)
+        same = (bar_of(designed, thin), bar_of(designed, thick), length, beside)
         if same not in seen:
             seen.add(same)
             _record_lap(writers, lengths, (thin, thick), (length, beside), len(seen))
@@ -283,7 +263,7 @@ def _record_lap(
     unlike = thin.size != thick.size
     other = f" with {thick.size}" if unlike else ""
     with sheet.part(f"anchorage-lap-{number}", f"Lap of {thin.face} bars {thin.size}{other}"):
-        place, larger = lengths[key_of(designed, thin)], lengths[key_of(designed, thick)]
+        place, larger = lengths[bar_of(designed, thin)], lengths[bar_of(designed, thick)]
         steps = Steps(sheet, place)
         sheet.note(
             "class",
@@ -354,8 +334,8 @@ def record_hook(
 
 def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, tied: bool) -> None:
     sheet = steps.sheet
-    covered = "side cover 60 mm and tail cover 50 mm or more" if reduced else "less"
-    ties = "ties at 3 bar diameters or closer" if tied else "none"
+    covered = COVERED_ROW if reduced else UNCOVERED_ROW
+    ties = TIED_ROW if tied else UNTIED_ROW
     steps.bind(
         k_hc=sheet.lookup("k_hc", hooks.COVER_FACTORS, covered),
         k_ht=sheet.lookup("k_ht", hooks.TIE_FACTORS, ties),

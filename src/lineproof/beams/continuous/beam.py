@@ -9,7 +9,7 @@ from typing import Any
 from lineproof.beams import basics
 from lineproof.beams.continuous import flexure, interface
 from lineproof.beams.continuous import loads as load_take_down
-from lineproof.beams.continuous.anchorage_chapter import COVERAGE, record_anchorage
+from lineproof.beams.continuous.anchorage_chapter import record_anchorage
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
 from lineproof.beams.continuous.cures_flow import failing, record_cures
@@ -31,6 +31,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
+from lineproof.beams.continuous.resistance_record import COVERAGE
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary

@@ -27,7 +27,6 @@ from lineproof.record import Entry
 from lineproof.sheet import Sheet
 
 SCHEDULE = "schedule"
-DRAWINGS = "drawings"
 FIRST_SCHEDULE = 60
 """Place of the schedules on the summary pages."""
 
