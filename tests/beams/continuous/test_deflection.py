@@ -280,17 +280,21 @@ def test_limit_follows_what_the_span_carries() -> None:
     assert list(divisors.values()) == [(180, True), (360, True), (480, False), (240, False)]
 
 
+def _least_depth(section: numbers.SpanSection, f_y: float) -> float:
+    row = numbers.continuity(section.free, section.left, section.right)
+    return numbers.least_depth(row, section.l_n, f_y, 2400)
+
+
 def test_span_depth_table() -> None:
     """l_n/16 simple: 6600/16 = 412.5; 500 MPa: x 1.1463 = 472.8 mm; /18, /21, /8."""
-    assert numbers.deep_enough(BASE, 400, 2400) == (412.5, True)
-    h_min, deep = numbers.deep_enough(replace(BASE, h=450), 500, 2400)
-    assert (round(h_min, 1), deep) == (472.8, False)
+    assert _least_depth(BASE, 400) == 412.5
+    assert round(_least_depth(BASE, 500), 1) == 472.8
     end = numbers.Place(350, 535, 2000)
     one, two = replace(BASE, left=end), replace(BASE, left=end, right=end)
-    assert numbers.deep_enough(one, 400, 2400)[0] == pytest.approx(6600 / 18)
-    assert numbers.deep_enough(two, 400, 2400)[0] == pytest.approx(6600 / 21)
+    assert _least_depth(one, 400) == pytest.approx(6600 / 18)
+    assert _least_depth(two, 400) == pytest.approx(6600 / 21)
     tip = replace(BASE, midspan=None, left=end, free="right", l_n=2000)
-    assert numbers.deep_enough(tip, 400, 2400)[0] == pytest.approx(250)
+    assert _least_depth(tip, 400) == pytest.approx(250)
 
 
 def test_what_is_not_computed_is_refused() -> None:

@@ -12,7 +12,9 @@ from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 
 from lineproof.errors import UserError
+from lineproof.formula import Criterion
 from lineproof.formula.compiled import ROUND_OFF
+from lineproof.record.printing import ratio
 from lineproof.standards.a23_3.bars import BARS
 
 Utilisation = Callable[[Mapping[str, float]], float]
@@ -191,6 +193,17 @@ def _cure(utilisation: Utilisation, symbol: str, variable: Variable) -> Cure:
     samples = later[:: max(1, len(later) // _LATER)]
     beyond = all(holds(used(each)) for each in (*samples, *later[-1:]))
     return Cure(symbol, value, variable.text(value, all_beyond=beyond), used(value))
+
+
+def part_used(test: Criterion, left: float, right: float) -> float:
+    """Return the utilisation of a check by its sides: 0 where it holds without one, else infinite.
+
+    ``left`` and ``right`` in the internal units of the check.
+    """
+    made = ratio(test.sign, left, right)
+    if made is None:
+        return 0.0 if test.holds(left, right) else math.inf
+    return made
 
 
 def holds(utilisation: float) -> bool:

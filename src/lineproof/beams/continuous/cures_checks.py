@@ -11,7 +11,7 @@ import math
 from collections.abc import Mapping
 from dataclasses import replace
 
-from lineproof.beams.continuous.cures import Utilisation
+from lineproof.beams.continuous.cures import Utilisation, part_used
 from lineproof.beams.continuous.deflection import (
     History,
     Place,
@@ -19,8 +19,8 @@ from lineproof.beams.continuous.deflection import (
     deflections,
 )
 from lineproof.beams.continuous.deflection_service import Stage, StageMoments
+from lineproof.beams.continuous.numbers import holds, put
 from lineproof.formula import Criterion, Formula
-from lineproof.record.printing import ratio
 from lineproof.standards.a23_3 import (
     flange,
     flexure,
@@ -35,18 +35,14 @@ _ABOVE_NORMAL_RULE = 40.0
 
 def follow(values: Values, *formulas: Formula) -> Values:
     """Compute formulas one after the other, each under its symbol."""
-    for formula in formulas:
-        values[formula.symbol] = formula.function(*[values[n] for n in formula.names])
+    put(values, *formulas)
     return values
 
 
 def used(test: Criterion, values: Mapping[str, float]) -> float:
     """Return the utilisation of a check: 0 where it holds without one, else infinite."""
     left, right = (side(*[values[n] for n in test.names]) for side in test.functions)
-    made = ratio(test.sign, left, right)
-    if made is None:
-        return 0.0 if test.holds(left, right) else math.inf
-    return made
+    return part_used(test, left, right)
 
 
 def changed(given: Mapping[str, float], changes: Mapping[str, float]) -> Values:
@@ -134,9 +130,7 @@ def stirrup_spacing(given: Mapping[str, float]) -> Utilisation:
 
     def utilisation(changes: Mapping[str, float]) -> float:
         values = follow(changed(given, changes), shear.D_V)
-        sides = (f(*[values[n] for n in shear.CLOSER.names]) for f in shear.CLOSER.functions)
-        halved = shear.CLOSER.holds(*sides)
-        follow(values, shear.S_MAX_HALVED if halved else shear.S_MAX)
+        follow(values, shear.S_MAX_HALVED if holds(shear.CLOSER, values) else shear.S_MAX)
         return used(shear.SPACING, values)
 
     return utilisation
@@ -196,7 +190,7 @@ def _resized(section: SpanSection, changes: Mapping[str, float]) -> SpanSection:
 
     made = replace(
         section, h=section.h + deeper, b_w=b_w, midspan=place("midspan"), left=place("left"),
-        right=place("right"),
+        right=place("right"), top=place("top"),
     )  # fmt: skip
     if not deeper and not wider:
         return made

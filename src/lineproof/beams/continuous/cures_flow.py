@@ -4,17 +4,16 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterable, Iterator, Mapping
-from dataclasses import replace
+from collections.abc import Iterable, Iterator
 
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure, Variable, told
 from lineproof.beams.continuous.cures_replay import bound_names
 from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
-from lineproof.beams.continuous.deflection import Behind, SpanSection, deflections
+from lineproof.beams.continuous.deflection import Behind, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
-from lineproof.beams.continuous.deflection_service import STAGES, span_behind
+from lineproof.beams.continuous.deflection_service import span_behind
 from lineproof.beams.continuous.deflections import history_of
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.shear_chapter import STIRRUPS
@@ -155,13 +154,9 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
         return []
     values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
 
-    def use(changes: Mapping[str, float]) -> float:
-        bent = cures_checks.deflecting(
-            _top_moved(section, changes), moments, carries=model.inputs.carries,
-            history=history_of(model), **values,
-        )  # fmt: skip
-        return bent(changes)
-
+    use = cures_checks.deflecting(
+        section, moments, carries=model.inputs.carries, history=history_of(model), **values
+    )
     recorded = utilisation(check)
     if recorded is None or abs(use({}) - recorded) > _SAME * recorded:
         return []
@@ -175,16 +170,6 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     return [*steel, *find.cures(use, variables)]
 
 
-def _top_moved(section: SpanSection, changes: Mapping[str, float]) -> SpanSection:
-    """Return a span whose top bars at midspan stand in the web as changed."""
-    at = section.top
-    if at is None:
-        return section
-    deeper = changes.get("h", section.h) - section.h
-    wider = changes.get("b_w", section.b_w) - section.b_w
-    return replace(section, top=replace(at, b=at.b + wider, d=at.d + deeper))
-
-
 def _behind(model: Model, span: int) -> dict[int, Behind]:
     """Return the span behind a cantilever, bent."""
     if not model.forces.beam.cantilever(span):
@@ -194,4 +179,4 @@ def _behind(model: Model, span: int) -> dict[int, Behind]:
         return {}
     section, moments = bent_of(model, number, {})
     made = deflections(section, moments, carries=model.inputs.carries, history=history_of(model))
-    return {number: Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})}
+    return {number: Behind.of(section.l, made)}

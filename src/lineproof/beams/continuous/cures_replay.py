@@ -11,9 +11,9 @@ from collections import deque
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
+from lineproof.beams.continuous.cures import part_used
 from lineproof.record import Entry
 from lineproof.record.entry import CRITERIA, DECISION, FOUND, LINE
-from lineproof.record.printing import ratio
 from lineproof.record.procedures import run
 
 FORCES = frozenset(("M_f", "V_f", "T_f", "R_f", "v_f"))
@@ -109,7 +109,7 @@ class Replay:
                 self._same(entry, _sides(entry, values))
             elif entry.kind in (LINE, FOUND):
                 values[id(entry)] = _again(entry, values)
-        return self._used(_sides(self.check, values))
+        return part_used(self.check.source, *_sides(self.check, values))
 
     @property
     def touches(self) -> bool:
@@ -119,13 +119,6 @@ class Replay:
     def _same(self, decision: Entry, sides: tuple[float, float]) -> None:
         if decision.source.holds(*sides) != bool(decision):
             raise AnotherCaseError(decision.id)
-
-    def _used(self, sides: tuple[float, float]) -> float:
-        source = self.check.source
-        made = ratio(source.sign, *sides)
-        if made is None:
-            return 0.0 if source.holds(*sides) else float("inf")
-        return made
 
 
 def _sides(entry: Entry, values: Mapping[int, float]) -> tuple[float, float]:

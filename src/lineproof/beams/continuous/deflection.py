@@ -19,6 +19,7 @@ from lineproof.beams.continuous.deflection_service import (
 from lineproof.errors import UserError
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
+from lineproof.standards.a23_3 import flange
 
 FINAL = "5 years or more"
 ATTACHED = "3 months"
@@ -51,10 +52,15 @@ class Place:
 
 @dataclass(frozen=True, slots=True)
 class Behind:
-    """The span behind a cantilever: length and effective inertia at every stage."""
+    """The span behind a cantilever: length [mm] and effective inertia [mm4] at every stage."""
 
     l: float
     I_ea: Mapping[Stage, float]
+
+    @classmethod
+    def of(cls, l: float, found: Deflections) -> Behind:
+        """Return a span of length l [mm], as its deflections have been found."""
+        return cls(l, {stage: found.stages[stage].I_ea for stage in STAGES})
 
 
 @dataclass(frozen=True, slots=True)
@@ -139,16 +145,18 @@ class Deflections:
         return max(sag, sag if self.rise is None else self.rise) / self.allowed
 
 
-def continuity(section: SpanSection) -> str:
-    """Return the row of the span-depth table that a span belongs to."""
-    if section.free:
+def continuity(free: FreeEnd, *ends: object | None) -> str:
+    """Return the row of the span-depth table that a span belongs to.
+
+    ``ends`` are its sections at continuous ends, None for a simple or free end.
+    """
+    if free:
         return "beam, cantilever"
-    held = (section.left is not None) + (section.right is not None)
     return (
         "beam, simply supported",
         "beam, one end continuous",
         "beam, both ends continuous",
-    )[held]
+    )[sum(end is not None for end in ends)]
 
 
 def cracked(place: Place, section: SpanSection) -> Cracked:
@@ -191,7 +199,7 @@ def deflections(
     f_rd = clause.F_R_DEFLECTION.function(section.f_r)
     M_crd = clause.CRACKING_BOTTOM.function(f_rd, section.I_g, section.y_b)
     M_crdn = stages.CRACKING_WEB.function(f_rd, section.b_w, section.h)
-    I_gw = section.b_w * section.h**3 / 12
+    I_gw = flange.INERTIA_RECTANGLE.function(section.b_w, section.h)
     made = {
         name: cracked(place, section)
         for name in ("midspan", "left", "right", "top")
@@ -332,16 +340,16 @@ def from_far_end(section: SpanSection, points: Sequence[Point]) -> tuple[Point, 
     return tuple(replace(p, x=section.behind.l - p.x) for p in points)
 
 
-def deep_enough(section: SpanSection, f_y: float, gamma_c: float) -> tuple[float, bool]:
-    """Return the least depth of the span-depth table [mm] and whether the span has it."""
-    k_h = clause.SPAN_DEPTH.number(continuity(section), "k_h")
+def least_depth(row: str, l_n: float, f_y: float, gamma_c: float) -> float:
+    """Return the least depth [mm] of a row of the span-depth table (9.8.2.1).
+
+    Clear span [mm], strength of the bars [MPa], density of the concrete [kg/m3].
+    """
+    k_h = clause.SPAN_DEPTH.number(row, "k_h")
     if plain_materials(f_y, gamma_c):
-        h_min = clause.LEAST_DEPTH.function(section.l_n, k_h)
-    else:
-        k_fy = clause.STEEL_MODIFIER.function(f_y)
-        k_gc = clause.DENSITY_MODIFIER.function(gamma_c)
-        h_min = clause.LEAST_DEPTH_MODIFIED.function(section.l_n, k_h, k_fy, k_gc)
-    return h_min, clause.DEEP_ENOUGH.holds(h_min, section.h)
+        return clause.LEAST_DEPTH.function(l_n, k_h)
+    k_fy, k_gc = clause.STEEL_MODIFIER.function(f_y), clause.DENSITY_MODIFIER.function(gamma_c)
+    return clause.LEAST_DEPTH_MODIFIED.function(l_n, k_h, k_fy, k_gc)
 
 
 def plain_materials(f_y: float, gamma_c: float) -> bool:

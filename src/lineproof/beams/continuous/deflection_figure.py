@@ -73,7 +73,7 @@ def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[Defle
     model = design.model
     section, moments = bent_of(model, span, behind)
     made = deflections(section, moments, carries=model.inputs.carries, history=history_of(model))
-    behind[span] = Behind(section.l, {s: made.stages[s].I_ea for s in STAGES})
+    behind[span] = Behind.of(section.l, made)
     shapes = deflected_shapes(section, moments, made)
     x = (shapes.x + design.outline.axes[span - 1]).tolist()
     return tuple(

@@ -6,7 +6,13 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from lineproof.beams.continuous.deflection_service import FreeEnd, Point, Stage
+from lineproof.beams.continuous.deflection_service import (
+    FreeEnd,
+    Point,
+    Stage,
+    pieces,
+    two_points,
+)
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import deflection_stages as stages
@@ -143,13 +149,6 @@ def points_at(loads: Sequence[LocalLoad], l: float, *, halved: bool) -> tuple[Po
             made.append(Point(load.bound["P_s"].value, load.bound["x_P"].value))
             continue
         w, start, end = (float(load.bound[name].value) for name in ("w_p", "x_1", "x_2"))
-        middle = l / 2
-        parted = halved and start < middle < end
-        stretches = [(start, middle), (middle, end)] if parted else [(start, end)]
-        for x_1, x_2 in stretches:
-            P = stages.HALF_OF_PARTIAL.function(w, x_2, x_1)
-            made += [Point(P, f.function(x_1, x_2)) for f in _BOTH]
+        for x_1, x_2 in pieces(start, end, l, halved=halved):
+            made += two_points(w, x_1, x_2)
     return tuple(made)
-
-
-_BOTH = (stages.FIRST_POINT, stages.SECOND_POINT)

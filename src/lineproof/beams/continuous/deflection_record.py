@@ -16,6 +16,8 @@ from lineproof.beams.continuous.deflection import (
     LIVE_LIMITS,
     NO_TOP_BARS,
     History,
+    continuity,
+    least_depth,
     plain_materials,
 )
 from lineproof.beams.continuous.deflection_limits import record_limits
@@ -79,11 +81,7 @@ class SpanEntries:
     @property
     def row(self) -> str:
         """The row of the span-depth table."""
-        if self.free:
-            return "beam, cantilever"
-        held = (self.left is not None) + (self.right is not None)
-        ends = ("simply supported", "one end continuous", "both ends continuous")
-        return f"beam, {ends[held]}"
+        return continuity(self.free, self.left, self.right)
 
     @property
     def name(self) -> str:
@@ -170,15 +168,8 @@ def named(
 
 
 def _is_deep(steps: Steps, span: SpanEntries) -> bool:
-    k_h = clause.SPAN_DEPTH.number(span.row, "k_h")
-    f_y, gamma_c = (float(steps.entry(n).value) for n in ("f_y", "gamma_c"))
-    l_n = steps.entry("l_n").value
-    if plain_materials(f_y, gamma_c):
-        h_min = clause.LEAST_DEPTH.function(l_n, k_h)
-    else:
-        k_fy, k_gc = clause.STEEL_MODIFIER.function(f_y), clause.DENSITY_MODIFIER.function(gamma_c)
-        h_min = clause.LEAST_DEPTH_MODIFIED.function(l_n, k_h, k_fy, k_gc)
-    return clause.DEEP_ENOUGH.holds(h_min, steps.entry("h").value)
+    l_n, f_y, gamma_c, h = (float(steps.entry(n).value) for n in ("l_n", "f_y", "gamma_c", "h"))
+    return clause.DEEP_ENOUGH.holds(least_depth(span.row, l_n, f_y, gamma_c), h)
 
 
 def _record_depth(steps: Steps, span: SpanEntries) -> Entry:

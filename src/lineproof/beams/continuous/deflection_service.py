@@ -284,7 +284,7 @@ def local_points(
             made.append(Point(factor * load.P, load.at))
         elif factor and isinstance(load, PartialLoad):
             for start, end in pieces(load.start, load.end, length, halved=halved):
-                made += _two_points(factor * load.w, start, end)
+                made += two_points(factor * load.w, start, end)
     return tuple(made)
 
 
@@ -298,8 +298,11 @@ def pieces(
     return ((start, end),)
 
 
-def _two_points(w: float, start: float, end: float) -> tuple[Point, Point]:
-    """Return two point loads that act on any cubic as a uniform load does (Gauss)."""
+def two_points(w: float, start: float, end: float) -> tuple[Point, Point]:
+    """Return two point loads that act on any cubic as a uniform load does (Gauss).
+
+    ``w`` in N/mm between the stations ``start`` and ``end`` [mm].
+    """
     P = clause.HALF_OF_PARTIAL.function(w, end, start)
     first = clause.FIRST_POINT.function(start, end)
     return Point(P, first), Point(P, clause.SECOND_POINT.function(start, end))
