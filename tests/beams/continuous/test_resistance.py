@@ -19,7 +19,7 @@ from lineproof.beams.continuous.resistance import (
     provide,
     stand,
 )
-from lineproof.beams.continuous.resistance_cover import covered, diagram
+from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.beams.continuous.resistance_demand import demand_at, end_tension, largest
 
 from .laid import beam_of
@@ -173,22 +173,6 @@ def test_a_gap_between_the_design_stations_is_found() -> None:
     beyond = next(s for s in found.stations if s.face == "bottom")
     assert beyond.ratio == pytest.approx(245 / 180.6, rel=5e-3)
     assert beyond.local == pytest.approx(3500, abs=40)
-
-
-def test_diagram_has_the_ends_of_the_bars() -> None:
-    """Arrays of one length along the beam; resistance is zero at ends of bars without hooks."""
-    designed = simple_beam()
-    made = diagram(designed, [bottom(-150.0, 7150.0, 2), bottom(1800.0, 5200.0, 2)])
-    arrays = (made.M_max, made.M_min, made.M_r_pos, made.M_r_neg, made.M_t_pos, made.M_t_neg)
-    assert {len(a) for a in arrays} == {len(made.x)}
-    assert (np.diff(made.x) > 0).all()
-    assert {1800.0, 5200.0} <= set(made.x.tolist())
-    assert made.M_max.max() == pytest.approx(245e6, rel=1e-3)
-    assert made.M_r_neg.max() == 0.0
-    at = {round(x): M for x, M in zip(made.x, made.M_r_pos, strict=True)}
-    assert (
-        at[1800] < at[round(1800 + 0.45 * 400 / 35**0.5 * 25.2)] == pytest.approx(357.8e6, rel=1e-3)
-    )
 
 
 def test_free_end_asks_nothing_inside_its_cover() -> None:

@@ -51,20 +51,20 @@ class Standing:
 
 def alike(a: BarRun, b: BarRun) -> bool:
     """Tell whether two runs are the same bars, one behind the other."""
-    return (a.face, a.layer, a.place, a.size, a.number) == (
-        b.face,
-        b.layer,
-        b.place,
-        b.size,
-        b.number,
-    )
+    one, other = ((r.face, r.layer, r.place, r.size, r.number) for r in (a, b))
+    return one == other
 
 
 def lapped(first: BarRun, second: BarRun) -> bool:
     """Tell whether the end of one run laps the start of the other, like bars in line."""
-    if not (alike(first, second) and first.start < second.start < first.end < second.end):
+    return alike(first, second) and _overlap(first, second, first.diameter)
+
+
+def _overlap(first: BarRun, second: BarRun, diameter: float) -> bool:
+    """Tell whether a run ends inside the next, on a length that is a lap of that diameter."""
+    if not first.start < second.start < first.end < second.end:
         return False
-    return first.end - second.start <= MOST_LAP * first.diameter
+    return first.end - second.start <= MOST_LAP * diameter
 
 
 def in_line(first: BarRun, second: BarRun) -> bool:
@@ -72,9 +72,8 @@ def in_line(first: BarRun, second: BarRun) -> bool:
     if alike(first, second):
         return lapped(first, second)
     a, b = ((r.face, r.layer, r.place, r.number) for r in (first, second))
-    most = MOST_LAP * max(first.diameter, second.diameter)
-    overlapping = first.start < second.start < first.end < second.end
-    return a == b and first.number == PAIR and overlapping and first.end - second.start <= most
+    thicker = max(first.diameter, second.diameter)
+    return a == b and first.number == PAIR and _overlap(first, second, thicker)
 
 
 def lap_pairs(
@@ -120,15 +119,21 @@ def _depth_at(designed: Designed, run: BarRun) -> float:
 
 
 def distance_of(designed: Designed, run: BarRun) -> float:
-    """Return the distance of the centres of a run's bars from their face."""
-    c_c = designed.outline.cover
-    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
+    """Return the distance of the centres of a run's bars from their face [mm]."""
     if run.layer == 1:
-        return c_c + d_bs + run.diameter / 2
-    d_b = max(layer.diameter for layer in first_layers(designed, run))
-    thicker = max(d_b, run.diameter)
-    s_l = value(bar_clause.LAYER_DISTANCE, d_b=thicker, a_max=designed.strengths.a_max)
-    return c_c + d_bs + d_b + s_l + run.diameter / 2
+        return _distance(designed, run.diameter)
+    first = max(layer.diameter for layer in first_layers(designed, run))
+    return _distance(designed, run.diameter, first)
+
+
+def _distance(designed: Designed, d_b: float, first: float = 0.0) -> float:
+    """Return how far bars of diameter d_b lie inside their face, over a ``first`` layer [mm]."""
+    outside = designed.outline.cover + BARS.number(designed.basis.stirrups.size, "d_b")
+    if first:
+        thicker = max(first, d_b)
+        s_l = value(bar_clause.LAYER_DISTANCE, d_b=thicker, a_max=designed.strengths.a_max)
+        outside = outside + first + s_l
+    return outside + d_b / 2
 
 
 def first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
@@ -150,6 +155,7 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
     pairs = level_pairs(designed, kept, lapped)
     ends = {i: kept[i].end - kept[j].start for i, j in pairs}
     starts = {j: kept[i].end - kept[j].start for i, j in pairs}
+    last = len(designed.outline.supports)
     made = []
     for index, run in enumerate(kept):
         bar = develop(designed.basis, bar_of(designed, run))
@@ -159,42 +165,22 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
         made.append(
             Standing(
                 run,
-                _rise(designed, run, run.hook_start, 1, rise_start),
-                _rise(designed, run, run.hook_end, 0, rise_end),
+                hook_at(designed, 1, run.size).l_dh if run.hook_start else rise_start,
+                hook_at(designed, last, run.size).l_dh if run.hook_end else rise_end,
                 distance_of(designed, run), lap_start, lap_end,
             )
         )  # fmt: skip
     return tuple(made)
 
 
-def _rise(designed: Designed, run: BarRun, hook: str, support: int, straight: float) -> float:
-    if not hook:
-        return straight
-    return hook_at(designed, support or len(designed.outline.supports), run.size).l_dh
-
-
 def effective_depth(designed: Designed, layers: BarLayers, h: float) -> float:
-    """Return the effective depth of layers counted in full."""
-    face: Face = "bottom"
+    """Return the effective depth of layers counted in full [mm]."""
     total = moment = 0.0
-    for number, layer in enumerate(layers, start=1):
-        run = BarRun(face, number, layer.number, layer.size, 0.0, 0.0)
-        away = _distance_in(designed, run, layers)
+    for number, layer in enumerate(layers):
+        first = layers[0].diameter if number else 0.0
         total += layer.area
-        moment += layer.area * (h - away)
+        moment += layer.area * (h - _distance(designed, layer.diameter, first))
     return moment / total
-
-
-def _distance_in(designed: Designed, run: BarRun, layers: BarLayers) -> float:
-    c_c = designed.outline.cover
-    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
-    if run.layer == 1:
-        return c_c + d_bs + run.diameter / 2
-    d_b = layers[0].diameter
-    s_l = value(
-        bar_clause.LAYER_DISTANCE, d_b=max(d_b, run.diameter), a_max=designed.strengths.a_max
-    )
-    return c_c + d_bs + d_b + s_l + run.diameter / 2
 
 
 def top_layers(designed: Designed, support: int) -> BarLayers:

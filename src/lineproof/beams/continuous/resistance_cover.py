@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable
 from dataclasses import dataclass
 
 import numpy as np
@@ -11,14 +11,12 @@ from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import Provided, Standing, provide, stand
+from lineproof.beams.continuous.resistance import Provided, provide, stand
 from lineproof.beams.continuous.resistance_demand import (
     NOTHING,
     Side,
     SpanDemand,
-    demand_at,
     demand_of,
-    stations,
 )
 
 FACES: tuple[Face, Face] = ("bottom", "top")
@@ -48,12 +46,12 @@ class Station:
     @property
     def ratio(self) -> float:
         """The larger of both ratios; infinite where bars are needed and none counts."""
-        return max(_ratio(self.M_f, self.M_r), _ratio(self.F, self.F_r))
+        return max(ratio_of(self.M_f, self.M_r), ratio_of(self.F, self.F_r))
 
     @property
     def by_tension(self) -> bool:
         """Whether the tension with shear governs, not the moment alone."""
-        return _ratio(self.F, self.F_r) > _ratio(self.M_f, self.M_r)
+        return ratio_of(self.F, self.F_r) > ratio_of(self.M_f, self.M_r)
 
 
 @dataclass(frozen=True, slots=True)
@@ -95,7 +93,8 @@ class Coverage:
         return not self.gaps
 
 
-def _ratio(demand: float, provided: float) -> float:
+def ratio_of(demand: float, provided: float) -> float:
+    """Return demand over resistance; infinite where something is asked and nothing provided."""
     if demand <= NOTHING:
         return 0.0
     return demand / provided if provided > 0 else float("inf")
@@ -159,7 +158,7 @@ def _station(
     side = demand.side(face)
     M_f, F = float(side.M[index]), float(side.F[index])
     M_r, F_r = float(provided.M_r[index]), float(provided.A[index]) * yield_force(designed)
-    by_moment = _ratio(M_f, M_r) >= _ratio(F, F_r)
+    by_moment = ratio_of(M_f, M_r) >= ratio_of(F, F_r)
     row = int(side.M_row[index] if by_moment else side.F_row[index])
     return Station(
         face, demand.span, float(demand.x[index]), float(demand.local[index]), M_f, M_r, F, F_r,
@@ -181,61 +180,3 @@ def _gaps(demand: SpanDemand, face: Face, ratio: Floats) -> list[Gap]:
         )
         for a, b in zip(firsts, lasts, strict=True)
     ]
-
-
-@dataclass(frozen=True, eq=False, slots=True)
-class Diagram:
-    """Arrays along the beam for the moment diagram: x [mm], moments [N.mm], top ones negative.
-
-    ``M_max`` and ``M_min`` are the envelopes, ``M_r_pos`` and ``M_r_neg`` the resistance of the
-    bars as detailed, ``M_t_pos`` and ``M_t_neg`` the moments that the tension with shear stands
-    for: moments at which the bars just carry it.
-    """
-
-    x: Floats
-    M_max: Floats
-    M_min: Floats
-    M_r_pos: Floats
-    M_r_neg: Floats
-    M_t_pos: Floats
-    M_t_neg: Floats
-
-
-def diagram(designed: Designed, runs: Iterable[BarRun], count: int = 101) -> Diagram:
-    """Return envelopes and resistance along the beam, with stations at the ends of all bars."""
-    kept = tuple(runs)
-    standing = stand(designed, kept)
-    columns: list[tuple[Floats, ...]] = []
-    for span in range(1, len(designed.outline.lengths) + 1):
-        demand = _with_bar_ends(designed, standing, span, count)
-        spans = np.full(len(demand.x), span)
-        pos, neg = (provide(designed, standing, face, demand.x, spans) for face in FACES)
-        columns.append(
-            (
-                demand.x, demand.bottom.M, -demand.top.M, pos.M_r, -neg.M_r,
-                _as_moment(demand.bottom, pos, designed), -_as_moment(demand.top, neg, designed),
-            )
-        )  # fmt: skip
-    return Diagram(*(np.concatenate(rows) for rows in zip(*columns, strict=True)))
-
-
-def _with_bar_ends(
-    designed: Designed, standing: Sequence[Standing], span: int, count: int
-) -> SpanDemand:
-    local = stations(designed, span, count)
-    axis = designed.outline.axes[span - 1]
-    kinks = [
-        x - axis
-        for s in standing
-        for x in (s.run.start, s.run.start + s.rise_start, s.run.end - s.rise_end, s.run.end)
-    ]
-    inner = [x for x in kinks if local[0] < x < local[-1]]
-    return demand_at(designed, span, np.unique(np.concatenate([local, inner])))
-
-
-def _as_moment(side: Side, provided: Provided, designed: Designed) -> Floats:
-    """Return the moment with the lever arm of the bars as they stand."""
-    F_r = provided.A * yield_force(designed)
-    arm = np.divide(provided.M_r, F_r, out=np.zeros_like(F_r), where=F_r > 0)
-    made: Floats = np.maximum(side.F * arm, np.maximum(side.M, 0.0))
-    return made

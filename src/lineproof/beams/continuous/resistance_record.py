@@ -32,6 +32,7 @@ from lineproof.beams.continuous.resistance_cover import (
     Coverage,
     Station,
     covered,
+    ratio_of,
     ratios,
     yield_force,
 )
@@ -77,8 +78,7 @@ def record_coverage(
 
 def _worst(stations: Sequence[Station], face: Face, *, tension: bool) -> Station:
     def ratio(station: Station) -> float:
-        demand, held = (station.F, station.F_r) if tension else (station.M_f, station.M_r)
-        return demand / held if held > 0 else float("inf") if demand > NOTHING else 0.0
+        return ratio_of(*((station.F, station.F_r) if tension else (station.M_f, station.M_r)))
 
     return max((s for s in stations if s.face == face), key=ratio)
 
@@ -156,7 +156,7 @@ def _demand(writers: Writers, station: Station, *, tension: bool) -> Demand:
     now = demand_at(writers.designed, station.span, np.array([station.local]))
     side = now.side(station.face)
     row = int((side.F_row if tension else side.M_row)[0])
-    start, end = writers.designed.forces.beam.faces(station.span)
+    start, end = forces.beam.faces(station.span)
     x = min(max(station.local, start), end)
     both = [forces.demand(station.span, x, s, row) for s in ("left", "right")]
     return max(both, key=lambda d: abs(d.V))
@@ -245,7 +245,7 @@ def _record_tension(
     near, t = _near(writers, station)
     middle = sum(designed.forces.beam.faces(station.span)) / 2
     end: End = "left" if station.local < middle else "right"
-    d_v = _shear_depth(writers, station, end)
+    d_v = _section(writers, station, end)["d_v"]
     side = demand_at(designed, station.span, np.array([station.local])).side(face)
     capped = float(side.free[0]) > float(side.cap[0])
     cap = _record_cap(writers, station, end) if capped else None
@@ -293,10 +293,6 @@ def _section(writers: Writers, station: Station, end: End) -> dict[str, Entry]:
     with sheet.part(f"{COVERAGE}-section", f"Top bars at support {support}"):
         record_section(writers, layers, span, "top", f"Top bars at support {support}")
     return sheet.entries_of(f"{COVERAGE}-section")
-
-
-def _shear_depth(writers: Writers, station: Station, end: End) -> Entry:
-    return _section(writers, station, end)["d_v"]
 
 
 def _record_cap(writers: Writers, station: Station, end: End) -> Entry:
