@@ -16,10 +16,8 @@ from lineproof.beams.continuous.anchorage_record import (
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars
 from lineproof.beams.continuous.laps import (
     cut_length,
-    has_room,
     lap_between,
     lap_length,
-    room_at_lap,
     split,
 )
 from lineproof.beams.continuous.layout import BarRun
@@ -88,14 +86,6 @@ def test_hooks_stay_at_their_ends_and_count_for_the_stock() -> None:
 def test_thick_bars_are_not_lapped() -> None:
     with pytest.raises(UserError, match="write bars of 35M or smaller"):
         split(beam(), replace(WHOLE, size="45M"), [9000.0])
-
-
-def test_room_at_a_lap_by_hand() -> None:
-    """4-25M in 350: s_c = 202.4/3 - 25.2 = 42.27; less one bar 17.07 < 35.28; two: 126.8 wide."""
-    assert room_at_lap(beam(), WHOLE, 4) == pytest.approx(202.4 / 3 - 50.4)
-    assert not has_room(beam(), WHOLE, 4)
-    assert room_at_lap(beam(), WHOLE, 2) == pytest.approx(202.4 - 25.2 - 50.4)
-    assert has_room(beam(), WHOLE, 2)
 
 
 def test_recorded_laps() -> None:

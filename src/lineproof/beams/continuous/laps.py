@@ -1,21 +1,19 @@
-"""Laps of bars: where runs longer than the stock are lapped, over which length, with what room."""
+"""Laps of bars: where runs longer than the stock are lapped, and over which length."""
 
 from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import replace
 
-from lineproof.beams.continuous.anchorage import Bar, bar_of, clear_distance, develop, holds, value
+from lineproof.beams.continuous.anchorage import bar_of, develop, holds
 from lineproof.beams.continuous.cutoff import STEP, ceil50
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.errors import UserError
-from lineproof.standards.a23_3 import bars as bar_clause
 from lineproof.standards.a23_3 import laps as clause
 
 HOOK_LEG = 16.0
 """Length of a 90 degree hook beyond the outside of the bar, in bar diameters, at most."""
-LEAST_PIECES = 2
 
 
 def lap_length(designed: Designed, run: BarRun) -> float:
@@ -78,16 +76,3 @@ def _lap_at(
         if reached:
             return max(reached)
     return furthest // STEP * STEP
-
-
-def room_at_lap(designed: Designed, run: BarRun, number: int) -> float:
-    """Return the clear distance where the two corner bars of a layer of ``number`` are lapped."""
-    bar = Bar(run.face, "web", run.layer, run.size, number, designed.outline.depths[0])
-    formula = clause.CLEAR_CORNERS if number > LEAST_PIECES else clause.CLEAR_PAIR
-    return value(formula, s_c=clear_distance(designed.basis, bar), d_b=run.diameter)
-
-
-def has_room(designed: Designed, run: BarRun, number: int) -> bool:
-    """Tell whether concrete can pass between the bars where the corner bars are lapped."""
-    s_min = value(bar_clause.LEAST_CLEAR, d_b=run.diameter, a_max=designed.strengths.a_max)
-    return holds(clause.ROOM, s_min=s_min, s_cl=room_at_lap(designed, run, number))
