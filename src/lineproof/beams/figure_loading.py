@@ -48,7 +48,6 @@ def loading_figure(
     note: str = "",
     moment: Runs = (),
     caption: str = "Loading",
-    alt: str = "",
 ) -> Figure:
     """Draw a simple span of ``span`` mm with its loads stacked in the order given.
 
@@ -84,7 +83,7 @@ def loading_figure(
         scale,
         (LEFT, 0.0),
         tuple(shapes),
-        alt or _alt(span, loads),
+        _alt(span, loads),
         caption,
     )
 

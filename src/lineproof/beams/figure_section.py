@@ -231,13 +231,11 @@ def section_figure(
     skin: SkinBars | None = None,
     centroid: float | None = None,
     caption: str = "Section",
-    alt: str = "",
 ) -> Figure:
     """Draw a section to scale with bars, stirrup and dimensions.
 
     Lengths in mm; ``bottom`` and ``top`` name the outermost row first; ``centroid`` is the depth
-    of the gross centroid below the top face. The alternative text is written from the numbers
-    unless one is given.
+    of the gross centroid below the top face. The alternative text is written from the numbers.
     """
     content = _Content(d, cover, stirrup_diameter, stirrup_label, bottom, top, slab, skin)
     reach = (
@@ -263,7 +261,7 @@ def section_figure(
         shown.scale,
         (round(left, 3), 17.0),
         tuple(shapes),
-        alt or _alt(shape, content),
+        _alt(shape, content),
         caption,
     )
 

@@ -19,6 +19,7 @@ MAIN, HOOK, TAIL, STIRRUP_HOOK = 26.0, 5.0, 3.6, 4.2
 HEIGHT, NARROWEST, WIDEST = 14.0, 17.0, 24.0
 TITLE, GAP, NOTE_HEIGHT = 5.0, 3.5, 6.0
 TALLEST = 220.0
+CAPTION = "Bending shapes"
 
 
 @dataclass(frozen=True, slots=True)
@@ -29,27 +30,25 @@ class Cell:
     height: float
 
 
-def bends_figures(
-    items: Sequence[BarItem], caption: str = "Bending shapes", tallest: float = TALLEST
-) -> tuple[Figure, ...]:
+def bends_figures(items: Sequence[BarItem]) -> tuple[Figure, ...]:
     """Draw the shape of each line of a schedule with its legs in mm, not to scale.
 
-    A long schedule takes several figures of at most ``tallest`` mm each.
+    A long schedule takes several figures, none taller than a page has room for.
     """
     pages: list[list[BarItem]] = [[]]
     height = 0.0
     for first in range(0, len(items), COLUMNS):
         row = list(items[first : first + COLUMNS])
         more = max(_cell(item).height for item in row) + GAP
-        if pages[-1] and height + more > tallest - NOTE_HEIGHT:
+        if pages[-1] and height + more > TALLEST - NOTE_HEIGHT:
             pages.append([])
             height = 0.0
         pages[-1].extend(row)
         height += more
-    return tuple(_grid(page, caption) for page in pages if page)
+    return tuple(_grid(page) for page in pages if page)
 
 
-def _grid(items: Sequence[BarItem], caption: str) -> Figure:
+def _grid(items: Sequence[BarItem]) -> Figure:
     cells = [_cell(item) for item in items]
     pitch = WIDTH / COLUMNS
     rows = [cells[first : first + COLUMNS] for first in range(0, len(cells), COLUMNS)]
@@ -63,7 +62,7 @@ def _grid(items: Sequence[BarItem], caption: str) -> Figure:
         top -= height + GAP
     note = "Legs in mm, outside to outside, not to scale. In brackets: shape code of ISO 3766."
     shapes.append(Text((1.5, 2.0), words(note), "text", 2.6, "start"))
-    return Figure(WIDTH, round(total, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(items), caption)
+    return Figure(WIDTH, round(total, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(items), CAPTION)
 
 
 def _cell(item: BarItem) -> Cell:

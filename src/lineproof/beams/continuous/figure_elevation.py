@@ -47,13 +47,12 @@ def elevation_figure(
     spans: tuple[int, int] | None = None,
     sections: Sequence[Section] = (),
     grade: str = "400R",
-    width: float = PAGE_WIDTH,
 ) -> Figure:
-    """Draw the spans given (the whole beam without) on a width of paper [mm].
+    """Draw the spans given (the whole beam without) on the width of the page.
 
     ``detailing`` has its marks (:func:`lineproof.beams.continuous.schedule.schedule`).
     """
-    seen = view(outline, detailing, spans or (1, len(outline.lengths)), width)
+    seen = view(outline, detailing, spans or (1, len(outline.lengths)))
     top = [run for run in detailing.bars if _above(run)]
     low = [run for run in detailing.bars if not _above(run)]
     rows_up, rows_down = pulled_bars(seen, top, grade), pulled_bars(seen, low, grade)
@@ -75,7 +74,7 @@ def elevation_figure(
     ]
     bottom = 24.0 - floor
     return Figure(
-        width,
+        PAGE_WIDTH,
         round(bottom + ceiling + 2 * BUBBLE + 1.5, 1),
         seen.scale,
         (round(seen.left - seen.low * seen.scale, 4), round(bottom, 1)),

@@ -14,7 +14,7 @@ from lineproof.beams.continuous.figure_elevation_cuts import (
     Cut,
     cut_lengths,
 )
-from lineproof.beams.continuous.figure_elevation_view import View
+from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.schedule import shape_of
 from lineproof.drawing import (
@@ -86,7 +86,7 @@ def _pulled(view: View, run: BarRun, grade: str) -> Pulled:
     label = _label(run, grade)
     half = text_width(label, LABEL) / 2
     left, right = view.paper(start), view.paper(end)
-    middle = min(max((left + right) / 2, half + 1.0), view.width - half - 1.0)
+    middle = min(max((left + right) / 2, half + 1.0), PAGE_WIDTH - half - 1.0)
     over_end = middle - half < left + 1.2 or middle + half > right - 1.2
     cut_off = start > run.start or end < run.end
     hooked = bool(run.hook_start or run.hook_end)

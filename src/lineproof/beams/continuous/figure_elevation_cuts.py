@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 from itertools import product
 from typing import Literal
 
-from lineproof.beams.continuous.figure_elevation_view import View
+from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.drawing.metrics import text_width
 from lineproof.drawing.paper import FIT_MARGIN
@@ -94,7 +94,7 @@ def _placed(view: View, run: BarRun, cuts: tuple[Cut, ...]) -> tuple[Cut, ...] |
         chosen = tuple(replace(cut, outside=side) for cut, side in zip(cuts, sides, strict=True))
         reaches = sorted(cut.reach(view) for cut in chosen)
         apart = len(reaches) <= 1 or reaches[0][1] <= reaches[1][0] + 1e-6
-        if apart and all(low >= 1.0 and high <= view.width - 1.0 for low, high in reaches):
+        if apart and all(low >= 1.0 and high <= PAGE_WIDTH - 1.0 for low, high in reaches):
             return chosen
     return None
 

@@ -33,7 +33,6 @@ class View:
     low: float
     high: float
     ratio: float
-    width: float
 
     @property
     def scale(self) -> float:
@@ -42,8 +41,8 @@ class View:
 
     @property
     def left(self) -> float:
-        """Paper left of ``low``: the drawing stands in the middle of its width."""
-        return (self.width - (self.high - self.low) * self.scale) / 2
+        """Paper left of ``low``: the drawing stands in the middle of the page."""
+        return (PAGE_WIDTH - (self.high - self.low) * self.scale) / 2
 
     def mm(self, paper: float) -> float:
         """Length along the beam of a length on paper."""
@@ -93,17 +92,17 @@ class View:
         return max(self.outline.depths[span - 1] for span in shown)
 
 
-def view(outline: BeamOutline, detailing: Detailing, spans: tuple[int, int], width: float) -> View:
-    """Return the view of a row of spans on a width of paper [mm], at a usual scale."""
+def view(outline: BeamOutline, detailing: Detailing, spans: tuple[int, int]) -> View:
+    """Return the view of a row of spans on the width of the page, at a usual scale."""
     first, last = spans
     low, high = outline.ends
     if first > 1:
         low = outline.axes[first - 1] - _past(outline, detailing, first - 1, first)
     if last < len(outline.lengths):
         high = outline.axes[last] + _past(outline, detailing, last + 1, last + 1)
-    room = width - 2 * MARGIN
+    room = PAGE_WIDTH - 2 * MARGIN
     ratio = next((r for r in SCALES if (high - low) / r <= room), math.ceil((high - low) / room))
-    return View(outline, first, last, low, high, ratio, width)
+    return View(outline, first, last, low, high, ratio)
 
 
 def _past(outline: BeamOutline, detailing: Detailing, span: int, support: int) -> float:

@@ -42,11 +42,7 @@ class ShearPiece:
     V_r: Sequence[float]
 
 
-def moment_figure(
-    outline: BeamOutline,
-    pieces: Sequence[MomentPiece],
-    caption: str = "Moment envelope and resistance of the bars as detailed",
-) -> Figure:
+def moment_figure(outline: BeamOutline, pieces: Sequence[MomentPiece]) -> Figure:
     """Draw the moment envelope with the resistance; values at the peaks, faces marked."""
     demand = [_scaled(p.x, p.M_max, KNM) for p in pieces]
     demand += [_scaled(p.x, p.M_min, KNM) for p in pieces]
@@ -83,7 +79,7 @@ def moment_figure(
                 )
             ),
         ),
-        caption,
+        "Moment envelope and resistance of the bars as detailed",
     )
 
 
@@ -139,10 +135,7 @@ def _ends(outline: BeamOutline, piece: MomentPiece) -> list[Mark]:
 
 
 def shear_figure(
-    outline: BeamOutline,
-    pieces: Sequence[ShearPiece],
-    stations: Sequence[float] = (),
-    caption: str = "Shear envelope and resistance of the stirrup zones",
+    outline: BeamOutline, pieces: Sequence[ShearPiece], stations: Sequence[float] = ()
 ) -> Figure:
     """Draw the shear envelope with the resistance of the zones, both signs.
 
@@ -187,7 +180,7 @@ def shear_figure(
             unit="kN",
             exceeded=tuple(exceeded),
         ),
-        caption,
+        "Shear envelope and resistance of the stirrup zones",
     )
 
 

@@ -77,7 +77,6 @@ def loads_figure(
     supports: Sequence[Support],
     loads: Sequence[Load],
     names: Mapping[str, str] | None = None,
-    caption: str = "Loads by type, unfactored",
 ) -> Figure:
     """Draw spans [mm], supports and loads; ``names`` gives words for load types (``D``: dead)."""
     kinds = list(dict.fromkeys(load.kind for load in loads))
@@ -112,7 +111,13 @@ def loads_figure(
     spans = ", ".join(f"{length:.0f}" for length in lengths)
     alt = f"Beam of spans {spans} mm. " + ". ".join(lanes) + "."
     return Figure(
-        WIDTH, round(base + 1.0, 1), scale, (left, 0.0), tuple(shapes), alt[:3900], caption
+        WIDTH,
+        round(base + 1.0, 1),
+        scale,
+        (left, 0.0),
+        tuple(shapes),
+        alt[:3900],
+        "Loads by type, unfactored",
     )
 
 
