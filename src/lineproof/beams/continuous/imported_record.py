@@ -320,5 +320,5 @@ def _reactions_text(file: ForcesFile) -> str:
 
 
 def _number(value: float, unit: str) -> str:
-    """Return a value to four digits; what is nothing beside 1 N or 1 kN.m prints as 0."""
+    """Return a value to four digits; below 1 N or 1 N.mm it is round-off and prints as 0."""
     return in_unit(value, unit, _DIGITS) if abs(value) >= 1.0 else "0"

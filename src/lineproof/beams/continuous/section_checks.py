@@ -32,8 +32,6 @@ TENSION_AREAS: Mapping[Shape, Formula] = {
     "L": crack_control.TENSION_AREA_L,
     "rectangular": crack_control.TENSION_AREA,
 }
-NO_YIELD = 2.0
-"""Utilisation told where the block would leave the section: no bars can do."""
 
 
 @dataclass(frozen=True, slots=True)

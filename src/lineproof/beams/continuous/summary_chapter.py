@@ -23,7 +23,7 @@ from lineproof.beams.continuous.figure_envelope import (
 )
 from lineproof.beams.continuous.figure_loads import loads_figure
 from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
-from lineproof.beams.continuous.model import GIVEN, LOADS, Model
+from lineproof.beams.continuous.model import LOADS, Model
 from lineproof.beams.continuous.resistance import provide, stand
 from lineproof.beams.continuous.resistance_demand import stretches_at
 from lineproof.beams.continuous.summary_tables import (
@@ -223,7 +223,7 @@ def _record_stations(model: Model) -> None:
             rows.append([str(span), f"{at / 1000:.3f}", *shown])
     model.sheet.table(
         "envelope", _ENVELOPE, rows, title="Envelopes of factored moments and shears",
-        rests_on=[*model.lengths, *model.sheet.entries_of(GIVEN).values()][: len(model.lengths)],
+        rests_on=model.lengths,
         csv="envelopes",
     )  # fmt: skip
 
