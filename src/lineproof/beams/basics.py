@@ -9,6 +9,7 @@ from lineproof.beams.flexure import YIELD_CLAUSE, confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
+from lineproof.quantity import Typed
 from lineproof.record.build import EARLIER_EDITION
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, cover, materials, stress_block
@@ -25,11 +26,7 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
     waived = ", waived at the ends where 10.5.1.3 lets it" if inputs.waive_minimum_at_ends else ""
     with sheet.part(GIVEN, "Given"):
         sheet.given("l", inputs.span)
-        sheet.given("s_b", inputs.spacing)
-        if inputs.tributary_width is None:
-            sheet.line(loads.TRIBUTARY)
-        else:
-            sheet.given("b_tr", inputs.tributary_width)
+        record_tributary(sheet, inputs.spacing, inputs.tributary_width)
         sheet.given("b_w", inputs.b_w)
         sheet.given("h", inputs.h)
         if inputs.h_f is not None:
@@ -50,6 +47,18 @@ def record_given(sheet: Sheet, inputs: FloorBeamInputs) -> None:
             f"{inputs.minimum_rule}{waived}.",
             title="Choices",
         )
+
+
+def record_tributary(sheet: Sheet, spacing: Typed, width: Typed | None) -> None:
+    """Record inside the open part the spacing of the beams and the tributary width.
+
+    Without a ``width`` as typed it is calculated from the spacing.
+    """
+    sheet.given("s_b", spacing)
+    if width is None:
+        sheet.line(loads.TRIBUTARY)
+    else:
+        sheet.given("b_tr", width)
 
 
 def record_materials(

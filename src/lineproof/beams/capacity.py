@@ -2,15 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
-
 from lineproof.beams.figures import MomentLevel
 from lineproof.beams.flexure import block_of, midspan, resistance
 from lineproof.beams.inputs import Shape
 from lineproof.beams.record_figures import record_capacity_figure
 from lineproof.beams.second_path import record_proof
 from lineproof.beams.section import zone_of
-from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit
 from lineproof.sheet import Sheet
@@ -37,16 +34,12 @@ def curve(sheet: Sheet, shape: Shape) -> list[tuple[float, float]]:
 
 
 def _resistance(values: dict[str, float], shape: Shape) -> float:
-    values["a"] = _call(flexure.BLOCK_RECTANGULAR, values)
+    values["a"] = flexure.BLOCK_RECTANGULAR.at(values)
     if shape == "rectangular" or values["a"] <= values["h_f"]:
-        return _call(flexure.M_R_RECTANGULAR, values)
-    values["C_f"] = _call(flexure.FLANGE_FORCE, values)
-    values["a_w"] = _call(flexure.BLOCK_IN_WEB, values)
-    return _call(flexure.M_R_TEE, values)
-
-
-def _call(formula: Formula, values: Mapping[str, float]) -> float:
-    return formula.function(*[values[name] for name in formula.names])
+        return flexure.M_R_RECTANGULAR.at(values)
+    values["C_f"] = flexure.FLANGE_FORCE.at(values)
+    values["a_w"] = flexure.BLOCK_IN_WEB.at(values)
+    return flexure.M_R_TEE.at(values)
 
 
 def record_shares(sheet: Sheet, shape: Shape) -> list[tuple[Entry, Entry, Entry]]:

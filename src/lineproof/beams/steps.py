@@ -52,8 +52,7 @@ class Steps:
 
     def holds(self, test: Criterion) -> bool:
         """Tell whether a comparison would hold here, without recording it."""
-        values = [self.entry(name).value for name in test.names]
-        return test.holds(*(side(*values) for side in test.functions))
+        return test.holds(*test.sides({name: self.entry(name).value for name in test.names}))
 
     def check(self, test: Criterion, key: str = "", **bound: Entry) -> Entry:
         """Record a check."""

@@ -46,6 +46,14 @@ class Formula:
         """The compiled function of positional floats, in the order of ``names``."""
         return compile_tree(self.tree, self.names)
 
+    def at(self, values: Mapping[str, float]) -> float:
+        """Return what the formula gives at values by name, all in internal units.
+
+        >>> formula("a = b + c", unit="mm").at({"b": 1.0, "c": 2.0, "d": 3.0})
+        3.0
+        """
+        return self.function(*[values[name] for name in self.names])
+
     @cached_property
     def step(self) -> Callable[[dict[str, Any]], Any]:
         """The compiled function of a scope of entries, giving ``(arguments, value)``."""
@@ -81,6 +89,12 @@ class Criterion:
     def functions(self) -> tuple[Callable[..., float], Callable[..., float]]:
         """The compiled sides, each a function of all ``names``."""
         return compile_tree(self.left, self.names), compile_tree(self.right, self.names)
+
+    def sides(self, values: Mapping[str, float]) -> tuple[float, float]:
+        """Return the left and the right side at values by name, all in internal units."""
+        given = [values[name] for name in self.names]
+        left, right = self.functions
+        return left(*given), right(*given)
 
     def holds(self, left: float, right: float) -> bool:
         """Tell whether the comparison is true."""

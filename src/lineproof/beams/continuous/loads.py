@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from lineproof.beams.basics import record_tributary
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import COLUMNS, GIVEN, LOADS, single_loads, whole_span_loads
 from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, stated
@@ -99,11 +100,7 @@ def record_given(sheet: Sheet, inputs: ContinuousInputs) -> None:
         for j, support in enumerate(inputs.supports, start=1):
             if support.width is not None:
                 sheet.given(f"b_s{j}", support.width)
-        sheet.given("s_b", inputs.spacing)
-        if inputs.tributary_width is None:
-            sheet.line(loads.TRIBUTARY)
-        else:
-            sheet.given("b_tr", inputs.tributary_width)
+        record_tributary(sheet, inputs.spacing, inputs.tributary_width)
         sheet.given("b_w", inputs.b_w)
         if inputs.h_f is not None:
             sheet.given("h_f", inputs.h_f)

@@ -16,7 +16,7 @@ Numbers = dict[str, float]
 
 def value(formula: Formula, at: Mapping[str, float]) -> float:
     """Return what a formula gives."""
-    return formula.function(*[at[name] for name in formula.names])
+    return formula.at(at)
 
 
 def put(at: Numbers, *formulas: Formula) -> float:
@@ -29,8 +29,7 @@ def put(at: Numbers, *formulas: Formula) -> float:
 
 def utilisation(test: Criterion, at: Mapping[str, float]) -> float:
     """Return demand over resistance of a check: at most 1 where it holds, more where it fails."""
-    values = [at[name] for name in test.names]
-    left, right = (side(*values) for side in test.functions)
+    left, right = test.sides(at)
     holds = test.holds(left, right)
     made = ratio(test.sign, left, right)
     if made is None or (made <= 1) != holds:
@@ -40,6 +39,4 @@ def utilisation(test: Criterion, at: Mapping[str, float]) -> float:
 
 def holds(test: Criterion, at: Mapping[str, float]) -> bool:
     """Tell whether a criterion holds."""
-    values = [at[name] for name in test.names]
-    left, right = (side(*values) for side in test.functions)
-    return test.holds(left, right)
+    return test.holds(*test.sides(at))
