@@ -294,10 +294,7 @@ def _take_down(model: Model, span: int) -> tuple[float, str]:
         if k == span:
             total[kind] = total.get(kind, 0.0) + entry.value * model.lengths[span - 1].value
     for load in model.on_span(span):
-        size = load.size.value
-        if load.start is not None and load.end is not None:
-            size *= load.end.value - load.start.value
-        total[load.kind] = total.get(load.kind, 0.0) + size
+        total[load.kind] = total.get(load.kind, 0.0) + load.total
     sums = [
         (sum(factor * total.get(kind, 0.0) for kind, factor in combination.factors), combination)
         for combination in factored_combinations(total)

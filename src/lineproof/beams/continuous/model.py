@@ -69,6 +69,14 @@ class SingleLoad:
         return {k: e for k, e in (named | {f"e_x{n}": self.end}).items() if e is not None}
 
     @property
+    def total(self) -> float:
+        """The whole load [N]: a load over part of the span times its length."""
+        size: float = self.size.value
+        if self.start is not None and self.end is not None:
+            size *= self.end.value - self.start.value
+        return size
+
+    @property
     def load(self) -> Load:
         """Return it as the analysis takes it."""
         if self.at is not None:

@@ -7,9 +7,9 @@ w l^2 with a girder (a spandrel), 1/16 with a column. On a wall the beam rests f
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import Any
 
 from lineproof.beams.continuous.case_forces import factor_text
+from lineproof.beams.continuous.groups import named
 from lineproof.beams.continuous.imported_restraint import record_load_terms, span_loads
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.symbols import code, stated
@@ -44,18 +44,20 @@ def worst_case(model: Model, span: int) -> tuple[float, int]:
 
 def _load(model: Model, span: int, row: int) -> float:
     length = model.lengths[span - 1].value
-    factors = {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
+    factors = _factors(model, span, row)
     total: float = sum(
         f * model.uniform[kind, span].value
         for kind, f in factors.items()
         if (kind, span) in model.uniform
     )
     for load in model.on_span(span):
-        size = load.size.value
-        if load.at is None and load.start is not None and load.end is not None:
-            size *= load.end.value - load.start.value
-        total += 2 * factors.get(load.kind, 0.0) * size / length
+        total += 2 * factors.get(load.kind, 0.0) * load.total / length
     return total
+
+
+def _factors(model: Model, span: int, row: int) -> dict[str, float]:
+    """Return the load factors of a case on a span, by load type."""
+    return {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
 
 
 def restraint_moment(model: Model, support: int, span: int) -> float:
@@ -87,21 +89,18 @@ def record_restraint(steps: Steps, model: Model, support: int, span: int) -> Non
     terms, bound = _terms(model, span, row)
     bound["l"] = model.lengths[span - 1]
     text = f"w_f = {' + '.join(terms)}"
-    names = {n: e for n, e in bound.items() if n in stated(text).names}
     smeared = ", single loads smeared" if model.on_span(span) else ""
-    w_f = sheet.line(stated(text), title=f"Load on span {span}{smeared}: {case}", **_only(names))
+    w_f = sheet.line(
+        stated(text), title=f"Load on span {span}{smeared}: {case}", **named(bound, text)
+    )
     steps.bind(w_f=w_f, l=model.lengths[span - 1])
     steps.line(_FORMULAS[carrier])
-
-
-def _only(names: Mapping[str, Entry]) -> dict[str, Any]:
-    return dict(names)
 
 
 def _terms(model: Model, span: int, row: int) -> tuple[list[str], dict[str, Entry]]:
     if model.imported is not None:
         return record_load_terms(model.sheet, model.imported, span, row)
-    factors = {kind: f for (kind, k), f in model.forces.factors_of(row).items() if k == span}
+    factors = _factors(model, span, row)
     terms, bound = [], {}
     for kind, factor in factors.items():
         if (kind, span) in model.uniform:
