@@ -10,6 +10,7 @@ import pytest
 
 from lineproof.beams.continuous import deflections as chapter
 from lineproof.beams.continuous.beam import DEFLECTIONS_CALL
+from lineproof.beams.continuous.cutoff_sets import Group
 from lineproof.beams.continuous.deflection import deflections
 from lineproof.beams.continuous.deflection_figure import bent_of, deflection_shapes_figure
 from lineproof.beams.continuous.deflection_top import _record_groups, through
@@ -143,9 +144,8 @@ def test_bars_of_several_sizes_and_layers() -> None:
     with sheet.chapter(DEFLECTIONS_CALL), sheet.part("deflection-1-top", title):
         steps = Steps(sheet, {"h": sheet.entry("given/h"), "c_c": sheet.find("c_c")})
         steps.bind(d_bs=sheet.entries_of("sag-1")["d_bs"])
-        _record_groups(
-            steps, [((1, "20M", "20M"), 3), ((1, "25M", "25M"), 2), ((2, "20M", "25M"), 2)]
-        )
+        first_layer = Group(1, "20M", 3, "20M"), Group(1, "25M", 2, "25M")
+        _record_groups(steps, [*first_layer, Group(2, "20M", 2, "25M")])
     made = sheet.entries_of("deflection-1-top")
     above = 620 - 30 - 11.3
     second = above - 25.2 - max(1.4 * 25.2, 1.4 * 20, 30) - 19.5 / 2

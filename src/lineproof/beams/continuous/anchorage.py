@@ -158,6 +158,11 @@ def bar_of(designed: Designed, run: BarRun) -> Bar:
     return Bar(run.face, "web", run.layer, run.size, max([run.number, *beside]), h)
 
 
+def development_length(designed: Designed, run: BarRun) -> float:
+    """Return the development length of a run in tension [mm]."""
+    return develop(designed.basis, bar_of(designed, run)).l_d
+
+
 def _layers_met(designed: Designed, run: BarRun, spans: list[int]) -> list[Any]:
     if run.face == "bottom":
         return [designed.bars.bottom[k - 1] for k in spans]

@@ -9,11 +9,11 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
-from typing import Literal
+from typing import Literal, TypeVar
 
 import numpy as np
 
-from lineproof.beams.continuous.anchorage import bar_of, develop, holds, value
+from lineproof.beams.continuous.anchorage import development_length, holds, value
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, Face
@@ -42,6 +42,7 @@ STEP = 50.0
 DESIGN_STATIONS = 101
 MARGIN = 0.998
 """Ratio kept at design, so that stations between those looked at are covered too."""
+Distance = TypeVar("Distance", float, np.ndarray)
 Zone = Literal["compression", "low shear", "double area", ""]
 """By which rule of 12.10.5 bars may end at a place; "" for none."""
 
@@ -113,8 +114,11 @@ def distance(designed: Designed, span: int, near: End, x: float) -> float:
     return x - axis if near == "left" else axis - x
 
 
-def local(designed: Designed, span: int, near: End, t: float) -> float:
-    """Return the station from the left axis of the span."""
+def local(designed: Designed, span: int, near: End, t: Distance) -> Distance:
+    """Return the station from the left axis of the span at the distance t from the near axis.
+
+    The same turns a station into a distance; both in mm.
+    """
     return t if near == "left" else designed.outline.lengths[span - 1] - t
 
 
@@ -148,9 +152,7 @@ def full_area(designed: Designed, runs: Iterable[BarRun]) -> tuple[float, float]
 
 def moments(designed: Designed, face: Face, span: int, near: End, t: np.ndarray) -> np.ndarray:
     """Return the moments of all cases (cases, t) of a face, positive where it is in tension."""
-    length = designed.outline.lengths[span - 1]
-    x = t if near == "left" else length - t
-    M, _ = designed.forces.along(span, x)
+    M, _ = designed.forces.along(span, local(designed, span, near, t))
     return M if face == "bottom" else -M
 
 
@@ -162,7 +164,7 @@ def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) 
     """
     designed = frame.designed
     demand = frame.demands[span - 1]
-    t = demand.local if near == "left" else designed.outline.lengths[span - 1] - demand.local
+    t = local(designed, span, near, demand.local)
     M = demand.side(face).M
     order = np.argsort(t)
     t, M = t[order], M[order]
@@ -249,7 +251,7 @@ def continuing_length(
         (
             value(
                 clause.CONTINUING, d=d, d_b=run.diameter,
-                l_d=develop(designed.basis, bar_of(designed, run)).l_d,
+                l_d=development_length(designed, run),
             )
             for run in runs
         ),

@@ -10,7 +10,7 @@ import numpy as np
 from lineproof.beams.continuous.cutoff import distance, far_face, half_of, local, sag_at
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
-from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.beams.continuous.resistance import alike, lap_pairs, lapped, level_pairs
 from lineproof.beams.continuous.resistance_demand import NOTHING
 
@@ -110,8 +110,7 @@ def bottom_side(designed: Designed, runs: Runs, span: int, near: End) -> SideOf:
 def top_side(designed: Designed, runs: Runs, support: int, side: End) -> SideOf:
     """Return how the top bars of a support end in the span on one side of it."""
     span, near = (support - 1, other(side)) if side == "left" else (support, other(side))
-    axis = designed.outline.axes[support - 1]
-    there = at_section(runs, "top", _inside(designed, support, axis))
+    there = at_section(runs, "top", top_section(designed.outline, support))
     tips = [
         (distance(designed, span, near, tip(whole(designed, runs, r, side), side)), r)
         for r in there
@@ -146,12 +145,15 @@ def _met(designed: Designed, others: Iterable[BarRun], span: int, near: End, t: 
     )
 
 
-def _inside(designed: Designed, support: int, axis: float) -> float:
-    """Return where the bars of a support are read: its axis, at an end support its inner face."""
-    half = designed.outline.supports[support - 1].half
+def top_section(outline: BeamOutline, support: int) -> float:
+    """Return where the top bars of a support are counted, from the axis of support 1 [mm].
+
+    At its axis, at an end support at its inner face.
+    """
+    axis, half = outline.axes[support - 1], outline.supports[support - 1].half
     if support == 1:
         return axis + half
-    return axis - half if support == len(designed.outline.supports) else axis
+    return axis - half if support == len(outline.supports) else axis
 
 
 def passes(designed: Designed, side: SideOf) -> bool:
@@ -176,8 +178,7 @@ def inflection(designed: Designed, span: int, near: End, count: int = 101) -> In
     None where no case bends the beam the other way at that support.
     """
     t = np.linspace(half_of(designed, span, near), far_face(designed, span, near), count)
-    x = t if near == "left" else designed.outline.lengths[span - 1] - t
-    M, V = designed.forces.along(span, x)
+    M, V = designed.forces.along(span, local(designed, span, near, t))
     found: list[Inflection] = []
     turns = (M[:, :-1] <= NOTHING) & (M[:, 1:] > NOTHING)
     for row, at in zip(*np.nonzero(turns), strict=True):

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from lineproof.beams.continuous.anchorage import bar_of, develop
+from lineproof.beams.continuous.anchorage import bar_of, development_length
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
 from lineproof.beams.continuous.cutoff import (
     Frame,
@@ -30,7 +30,7 @@ from lineproof.beams.continuous.forces import Demand
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_demand import stretch_at
 from lineproof.beams.flexure import required
-from lineproof.beams.steps import Steps
+from lineproof.beams.steps import Steps, only
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
@@ -64,6 +64,16 @@ class Site:
     def bar(self, run: BarRun) -> Mapping[str, Entry]:
         """Return the recorded development of a run."""
         return self.lengths[bar_of(self.writers.designed, run)]
+
+    def longest(self, runs: Runs) -> Mapping[str, Entry]:
+        """Return the recorded development of the run that needs the longest one."""
+        designed = self.writers.designed
+        return self.bar(max(runs, key=lambda run: development_length(designed, run)))
+
+
+def thickest(runs: Runs) -> BarRun:
+    """Return the first of the runs with the largest diameter."""
+    return max(runs, key=lambda run: run.diameter)
 
 
 def record_cuts(site: Site) -> None:
@@ -116,8 +126,7 @@ def record_extension(site: Site, steps: Steps, t_point: float, t: float, runs: R
     designed, side = site.writers.designed, site.side
     _record_angle(site, steps, along(designed, side.span, side.near, t_point))
     past = Steps(site.writers.sheet, steps.place | site.section)
-    thick = max(runs, key=lambda run: run.diameter)
-    past.bind(x_e=site.given("x_e", t), d_b=site.bar(thick)["d_b"])
+    past.bind(x_e=site.given("x_e", t), d_b=site.bar(thickest(runs))["d_b"])
     past.line(clause.EXTENSION)
     past.line(clause.PAST_INWARD if side.face == "bottom" else clause.PAST_OUTWARD)
     past.check(clause.EXTENDED)
@@ -137,14 +146,12 @@ def _record_angle(site: Site, steps: Steps, place: float) -> None:
 
 def _record_continuing(site: Site, steps: Steps, index: int) -> None:
     """Record the length that the continuing bars need past the point (12.10.4)."""
-    side, designed = site.side, site.writers.designed
+    side = site.side
     if not side.continuing(index):
         return
-    longest = max(
-        side.continuing(index), key=lambda r: develop(designed.basis, bar_of(designed, r)).l_d
-    )
+    longest = site.longest(side.continuing(index))
     past = Steps(site.writers.sheet, steps.place | site.section)
-    past.bind(**{name: site.bar(longest)[name] for name in ("d_b", "l_d")})
+    past.bind(**only(longest, ("d_b", "l_d")))
     past.bind(x_co=site.given("x_co", side.t_continuing(index)))
     past.line(clause.CONTINUING)
     inward = side.face == "bottom"

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 from lineproof.beams.bars import BarLayer, bars_text
 from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain
+from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import first_layers
 from lineproof.beams.steps import Steps
@@ -19,7 +20,7 @@ from lineproof.standards.a23_3.bars import BARS
 
 @dataclass(frozen=True, slots=True)
 class Group:
-    """Bars of one size in one layer that count together; ``area`` is set where it is recorded."""
+    """Bars of one size in one layer that count together."""
 
     layer: int
     size: str
@@ -30,11 +31,16 @@ class Group:
 
 def grouped(writers: Writers, runs: Iterable[BarRun]) -> tuple[Group, ...]:
     """Return the bars by layer and size, in order."""
+    return groups_met(writers.designed, runs)
+
+
+def groups_met(designed: Designed, runs: Iterable[BarRun]) -> tuple[Group, ...]:
+    """Return the bars by layer, size and the first layer that they stand over, in order."""
     found: dict[tuple[int, str, str], int] = {}
     for run in runs:
         first = run.size
         if run.layer > 1:
-            layers = first_layers(writers.designed, run)
+            layers = first_layers(designed, run)
             first = max(layers, key=lambda layer: layer.diameter).size
         key = (run.layer, run.size, first)
         found[key] = found.get(key, 0) + run.number
@@ -131,7 +137,12 @@ def _record_depth(steps: Steps, group: Group, symbol: str, mark: str) -> Entry:
             clause.DEPTH_ONE_LAYER if symbol == "d" else clause.DEPTH_FIRST, symbol, d_b=d_b
         )
     below = _of_size(steps, "d_b", f"f{mark}", group.first)
-    thicker = below if BARS.number(group.first, "d_b") >= BARS.number(group.size, "d_b") else d_b
+    return record_second_depth(steps, symbol, mark, d_b, below)
+
+
+def record_second_depth(steps: Steps, symbol: str, mark: str, d_b: Entry, below: Entry) -> Entry:
+    """Record inside the open part the depth of a second layer over bars of diameter ``below``."""
+    thicker = max((below, d_b), key=lambda entry: float(entry.value))
     first = steps.line(clause.DEPTH_FIRST, f"d_f{mark}", d_b=below)
     s_l = steps.line(clause.LAYER_DISTANCE, f"s_l{mark}", d_b=thicker)
     return steps.line(clause.DEPTH_SECOND, symbol, d_1=first, d_b=below, s_l=s_l, d_b2=d_b)

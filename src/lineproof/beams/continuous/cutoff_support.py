@@ -7,7 +7,6 @@ from collections.abc import Mapping
 import numpy as np
 
 from lineproof.beams.bars import BarLayers, bars_text
-from lineproof.beams.continuous.anchorage import bar_of, develop
 from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain, record_hook
 from lineproof.beams.continuous.cutoff import (
     Point,
@@ -18,7 +17,7 @@ from lineproof.beams.continuous.cutoff import (
     support_of,
 )
 from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes, tip
-from lineproof.beams.continuous.cutoff_record import Site, record_extension
+from lineproof.beams.continuous.cutoff_record import Site, record_extension, thickest
 from lineproof.beams.continuous.cutoff_sets import (
     Group,
     begin,
@@ -82,13 +81,25 @@ def record_into_support(site: Site) -> None:
         if side.t_kept < -half_of(designed, side.span, side.near):
             sheet.note("through", "The bars run through the support.", title="End of the bars")
             return
-        width = designed.outline.supports[support - 1].width
-        steps.bind(
-            b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
-            x_e=site.given("x_e", side.t_kept),
-        )
+        steps.bind(b_sp=_given_width(site.writers, support), x_e=site.given("x_e", side.t_kept))
         steps.line(clause.IN_SUPPORT)
         steps.check(clause.LENGTH_IN_SUPPORT)
+
+
+def _given_width(writers: Writers, support: int) -> Entry:
+    """Record inside the open part the width of a support along the beam."""
+    width = writers.designed.outline.supports[support - 1].width
+    return writers.sheet.given("b_sp", plain(width, "mm"), source=f"support {support}")
+
+
+def _bind_support(writers: Writers, steps: Steps, support: int) -> None:
+    """Record and bind the width of an end support and the cover at the end of the bars."""
+    steps.bind(
+        b_sp=_given_width(writers, support),
+        c_end=writers.sheet.given(
+            "c_end", plain(writers.designed.end_cover, "mm"), source="as laid"
+        ),
+    )
 
 
 def _fail(site: Site, test: object, symbol: str, nothing: str) -> None:
@@ -118,10 +129,10 @@ def record_zero_moment(site: Site, hooked: Hooks) -> None:
         steps.bind(x_e=site.given("x_e", side.t_kept))
         steps.line(clause.PAST_INWARD)
         past = Steps(site.writers.sheet, steps.place | site.section)
-        past.bind(d_b=site.bar(_thickest(side.kept))["d_b"])
+        past.bind(d_b=site.bar(thickest(side.kept))["d_b"])
         steps.bind(l_a=past.line(clause.PAST_INFLECTION))
         steps.line(clause.LIMIT)
-        steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=_longest(site)["l_d"])
+        steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=site.longest(side.kept)["l_d"])
 
 
 def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
@@ -135,16 +146,12 @@ def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
         steps.bind(x_t=site.given("x_t", 0.0, "support axis"))
         demand = site.demand(0.0, int(np.abs(V).argmax()))
         site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
-        width = designed.outline.supports[support - 1].width
-        steps.bind(
-            b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
-            c_end=sheet.given("c_end", plain(designed.end_cover, "mm"), source="as laid"),
-        )
+        _bind_support(site.writers, steps, support)
         steps.line(clause.PAST_CENTRE)
         _, confined = support_shear(designed, side.span, side.near)
         steps.line(clause.LIMIT_CONFINED if confined else clause.LIMIT)
         bent = [hooked[support, r.size] for r in side.kept if _hook(r, side.near)]
-        longest = max(bent, key=lambda e: e.value) if bent else _longest(site)["l_d"]
+        longest = max(bent, key=lambda e: e.value) if bent else site.longest(side.kept)["l_d"]
         steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=longest)
 
 
@@ -154,17 +161,6 @@ def _kept(site: Site) -> Steps:
     record_area(steps, grouped(site.writers, site.side.kept), "A_s")
     record_resistance(steps, site.writers, site.side.face)
     return steps
-
-
-def _thickest(runs: Runs) -> BarRun:
-    return max(runs, key=lambda run: run.diameter)
-
-
-def _longest(site: Site) -> Mapping[str, Entry]:
-    designed = site.writers.designed
-    return site.bar(
-        max(site.side.kept, key=lambda r: develop(designed.basis, bar_of(designed, r)).l_d)
-    )
 
 
 def _hook(run: BarRun, near: End) -> str:
@@ -184,7 +180,7 @@ def assumed_restraint(site: Site) -> bool:
 def record_restrained_end(site: Site) -> None:
     """Record how far all top bars reach past a face whose restraint is assumed."""
     side, writers = site.side, site.writers
-    sheet, designed = writers.sheet, writers.designed
+    sheet = writers.sheet
     support = support_of(side.span, side.near)
     with sheet.part(f"{site.key}-restraint", f"{site.title}: past the face of the support"):
         sheet.note(
@@ -195,17 +191,15 @@ def record_restrained_end(site: Site) -> None:
             none = sheet.given("l_ext", "0 mm", source="no top bars stand at the face")
             sheet.check(clause.RESTRAINED_END, l_ext=none, l_n=writers.span(side.span)["l_n"])
             return
-        longest = max(side.runs, key=lambda r: develop(designed.basis, bar_of(designed, r)).l_d)
         shortest = side.cuts[0].t if side.cuts else side.t_kept
-        width = designed.outline.supports[support - 1].width
         steps = Steps(sheet, place_of(writers, side.span))
         steps.bind(
-            b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
-            x_e=sheet.given("x_e", plain(shortest, "mm"), source="as laid, the shortest bars"),
+            b_sp=_given_width(writers, support),
+            x_e=site.given("x_e", shortest, "as laid, the shortest bars"),
         )
         steps.line(clause.PAST_FACE)
         steps.check(clause.RESTRAINED_END)
-        steps.bind(l_d=site.bar(longest)["l_d"], l_av=steps.entry("l_ext"))
+        steps.bind(l_d=site.longest(side.runs)["l_d"], l_av=steps.entry("l_ext"))
         steps.check(development.DEVELOPED)
 
 
@@ -278,12 +272,7 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
 
 
 def _record_fit(writers: Writers, steps: Steps, support: int) -> None:
-    sheet, designed = writers.sheet, writers.designed
-    width = designed.outline.supports[support - 1].width
-    steps.bind(
-        b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
-        c_end=sheet.given("c_end", plain(designed.end_cover, "mm"), source="as laid"),
-    )
+    _bind_support(writers, steps, support)
     steps.line(hooks.AVAILABLE)
     steps.check(hooks.FITS)
 
@@ -345,7 +334,7 @@ def _record_end_force(site: Site, steps: Steps) -> None:
 def record_end_top(site: Site) -> None:
     """Record straight top bars at an end support: developed at its face."""
     side, writers = site.side, site.writers
-    sheet, designed = writers.sheet, writers.designed
+    sheet = writers.sheet
     support = support_of(side.span, side.near)
     straight = [run for run in side.runs if not _hook(run, side.near)]
     for number, size in enumerate(sorted({run.size for run in straight}), 1):
@@ -355,10 +344,6 @@ def record_end_top(site: Site) -> None:
             f"Top bars {size} at the face of support {support}",
         ):
             steps = Steps(sheet, dict(site.bar(run)))
-            width = designed.outline.supports[support - 1].width
-            steps.bind(
-                b_sp=sheet.given("b_sp", plain(width, "mm"), source=f"support {support}"),
-                c_end=sheet.given("c_end", plain(designed.end_cover, "mm"), source="as laid"),
-            )
+            _bind_support(writers, steps, support)
             steps.line(hooks.AVAILABLE)
             steps.check(development.DEVELOPED)

@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 
+from lineproof.beams.continuous.cutoff_sets import Group, groups_met, record_second_depth
 from lineproof.beams.continuous.deflection_service import Stage, StageMoments
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.geometry import span_place
@@ -11,7 +12,6 @@ from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.resistance import (
     Standing,
-    first_layers,
     in_line,
     lap_pairs,
     stand,
@@ -28,8 +28,6 @@ _NOTE = (
     "in tension. Counted are those that reach past midspan by their development length to both "
     "sides; two bars lapped there count as one."
 )
-Group = tuple[int, str, str]
-"""Layer and size of bars, and the size of the first layer, which a second one stands under."""
 
 
 def top_key(span: int) -> str:
@@ -86,9 +84,8 @@ def record_top(design: Design, span: int) -> Mapping[str, Entry] | None:
     """Record the top bars that run through midspan of a span; None, and no part, without any."""
     model, designed = design.model, design.designed
     axes = designed.outline.axes
-    groups = _grouped(
-        design, through(stand(designed, design.runs), (axes[span - 1] + axes[span]) / 2)
-    )
+    middle = (axes[span - 1] + axes[span]) / 2
+    groups = groups_met(designed, through(stand(designed, design.runs), middle))
     if not groups:
         return None
     sheet = model.sheet
@@ -103,24 +100,12 @@ def record_top(design: Design, span: int) -> Mapping[str, Entry] | None:
     return {name: made[name] for name in ("d", "A_s")}
 
 
-def _grouped(design: Design, runs: Iterable[BarRun]) -> list[tuple[Group, int]]:
-    found: dict[Group, int] = {}
-    for run in runs:
-        first = run.size
-        if run.layer > 1:
-            layers = first_layers(design.designed, run)
-            first = max(layers, key=lambda layer: layer.diameter).size
-        group = run.layer, run.size, first
-        found[group] = found.get(group, 0) + run.number
-    return sorted(found.items())
-
-
-def _record_groups(steps: Steps, groups: Sequence[tuple[Group, int]]) -> None:
+def _record_groups(steps: Steps, groups: Sequence[Group]) -> None:
     """Record area and depth of every group and, of several, of all together as A_s and d."""
     A = d = None
-    for index, (group, number) in enumerate(groups, start=1):
+    for index, group in enumerate(groups, start=1):
         mark = "" if len(groups) == 1 else str(index)
-        own = _record_group(steps, group, number, mark)
+        own = _record_group(steps, group, mark)
         if A is None or d is None:
             A, d = own
             continue
@@ -131,21 +116,18 @@ def _record_groups(steps: Steps, groups: Sequence[tuple[Group, int]]) -> None:
         d = steps.line(clause.DEPTH_TWO_LAYERS, "d" if last else f"d_c{index - 1}", **pair)
 
 
-def _record_group(steps: Steps, group: Group, number: int, mark: str) -> tuple[Entry, Entry]:
-    sheet, (layer, size, first) = steps.sheet, group
+def _record_group(steps: Steps, group: Group, mark: str) -> tuple[Entry, Entry]:
+    sheet, size = steps.sheet, group.size
     d_b = sheet.lookup(f"d_b{mark}", BARS, size, "d_b", title="diameter of the bar")
     A_b = sheet.lookup(f"A_b{mark}", BARS, size, "A_b", title="area of one bar")
     n_b = sheet.given(
-        f"n_{mark}" if mark else "n_b", str(number), "number of bars through midspan",
+        f"n_{mark}" if mark else "n_b", str(group.number), "number of bars through midspan",
         source="as detailed",
     )  # fmt: skip
     A_s = steps.line(clause.AREA_OF_BARS, f"A_s{mark}", n_b=n_b, A_b=A_b)
     symbol = f"d_{mark}" if mark else "d"
-    if layer == 1:
+    if group.layer == 1:
         formula = clause.DEPTH_FIRST if mark else clause.DEPTH_ONE_LAYER
         return A_s, steps.line(formula, symbol, d_b=d_b)
-    over = sheet.lookup(f"d_bf{mark}", BARS, first, "d_b", title="diameter of the bar")
-    thicker = max((over, d_b), key=lambda entry: float(entry.value))
-    d_f = steps.line(clause.DEPTH_FIRST, f"d_f{mark}", d_b=over)
-    s_l = steps.line(clause.LAYER_DISTANCE, f"s_l{mark}", d_b=thicker)
-    return A_s, steps.line(clause.DEPTH_SECOND, symbol, d_1=d_f, d_b=over, s_l=s_l, d_b2=d_b)
+    over = sheet.lookup(f"d_bf{mark}", BARS, group.first, "d_b", title="diameter of the bar")
+    return A_s, record_second_depth(steps, symbol, mark, d_b, over)

@@ -16,8 +16,7 @@ import numpy as np
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.continuous.anchorage import (
     available,
-    bar_of,
-    develop,
+    development_length,
     has_hooks,
     holds,
     hook_at,
@@ -132,8 +131,12 @@ def support_end(designed: Designed, span: int, near: End) -> float:
 def _ended(
     designed: Designed, span: int, near: End, run: BarRun, t: float, hook: Hook = ""
 ) -> BarRun:
-    x = along(designed, span, near, t)
-    if near == "left":
+    return placed(near, run, along(designed, span, near, t), hook)
+
+
+def placed(side: End, run: BarRun, x: float, hook: Hook = "") -> BarRun:
+    """Return a run whose end on one side stands at x from the axis of support 1 [mm]."""
+    if side == "left":
         return replace(run, start=x, hook_start=hook)
     return replace(run, end=x, hook_end=hook)
 
@@ -181,7 +184,7 @@ def _held(
     l_av = available(designed, support)
     lengths = [
         hook_at(designed, support, run.size).l_dh if hook
-        else develop(designed.basis, bar_of(designed, replace(run, start=0.0, end=1.0))).l_d
+        else development_length(designed, replace(run, start=0.0, end=1.0))
         for run in inside
     ]  # fmt: skip
     if hook and max(lengths) > l_av:
@@ -318,7 +321,7 @@ def _into_step(designed: Designed, span: int, near: End, run: BarRun) -> BarRun:
     beside = span - 1 if near == "left" else span + 1
     t = designed.end_cover - half
     if designed.outline.depths[span - 1] < designed.outline.depths[beside - 1]:
-        l_d = develop(designed.basis, bar_of(designed, run)).l_d
+        l_d = development_length(designed, run)
         t = min(t, floor50(half - l_d))
     return _ended(designed, span, near, run, t)
 

@@ -9,7 +9,7 @@ from typing import Any, get_args
 
 from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, value
-from lineproof.beams.continuous.cutoff_ends import at_section
+from lineproof.beams.continuous.cutoff_ends import at_section, top_section
 from lineproof.beams.continuous.detailing_data import Basis, SectionBars, TopBars
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
 from lineproof.beams.continuous.resistance import lap_pairs
@@ -192,16 +192,8 @@ def _check_sections(
         middle = sum(outline.faces(span)) / 2
         _check_section(f"span {span}", runs, "bottom", middle, layers, faults)
     for support, top in enumerate(sections.top, start=1):
-        x = _inner(outline, support)
+        x = top_section(outline, support)
         _check_section(f"support {support}", runs, "top", x, top.web, faults)
-
-
-def _inner(outline: BeamOutline, support: int) -> float:
-    """Return where the top bars of a support are counted: axis, or the inner face at an end."""
-    axis, half = outline.axes[support - 1], outline.supports[support - 1].half
-    if support == 1:
-        return axis + half
-    return axis - half if support == len(outline.supports) else axis
 
 
 def _check_section(
@@ -237,7 +229,7 @@ def section_bars_of(runs: Iterable[BarRun], outline: BeamOutline, holders: str) 
         bottom.append(layers)
     top = []
     for support, built in enumerate(outline.supports, start=1):
-        x = _inner(outline, support)
+        x = top_section(outline, support)
         overhang = sum(r.number for r in at_section(kept, "top", x) if r.place == "overhang")
         free = built.kind == "free"
         web = () if free else _web_at(kept, "top", x, f"support {support}", faults)

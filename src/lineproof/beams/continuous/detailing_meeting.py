@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.continuous.anchorage import bar_of, develop
+from lineproof.beams.continuous.anchorage import development_length
 from lineproof.beams.continuous.cutoff import ceil50, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
@@ -42,7 +42,7 @@ def with_restraint(
     if support_of(span, near) not in designed.restrained:
         return found
     start, end = designed.outline.faces(span)
-    l_d = max(develop(designed.basis, bar_of(designed, run)).l_d for run in groups)
+    l_d = max(development_length(designed, run) for run in groups)
     least = ceil50(half_of(designed, span, near) + max((end - start) / 4, l_d))
     most = designed.outline.lengths[span - 1]
     return Reach(

@@ -11,7 +11,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
-from lineproof.beams.continuous.anchorage import available, bar_of, develop, has_hooks, value
+from lineproof.beams.continuous.anchorage import available, development_length, has_hooks, value
 from lineproof.beams.continuous.cutoff import (
     MARGIN,
     STEP,
@@ -32,7 +32,7 @@ from lineproof.beams.continuous.cutoff import (
     worst_between,
     zones_at,
 )
-from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
+from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES, placed
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
 from lineproof.beams.continuous.detailing_meeting import Reach, met, with_restraint
@@ -156,7 +156,7 @@ def _developed(
     """Return a reach that develops the bars at the support axis, for the face beyond it."""
     span = support - 1 if side == "left" else support
     most = designed.outline.lengths[span - 1] - designed.end_cover
-    longest = max(develop(designed.basis, bar_of(designed, run)).l_d for run in groups)
+    longest = max(development_length(designed, run) for run in groups)
     least = min(ceil50(longest), most)
     return Reach(max(found.long, least), max(found.short, least), found.through)
 
@@ -198,21 +198,15 @@ def _end(designed: Designed, support: int, side: End, run: BarRun, reach: float 
     axis = designed.outline.axes[support - 1]
     sign = -1.0 if side == "left" else 1.0
     if reach is not None:
-        return _placed(side, run, axis + sign * reach)
+        return placed(side, run, axis + sign * reach)
     half = designed.outline.supports[support - 1].half
     x = axis + sign * (half - designed.end_cover)
-    return _placed(side, run, x, end_hook(designed, support, run))
-
-
-def _placed(side: End, run: BarRun, x: float, hook: Hook = "") -> BarRun:
-    if side == "left":
-        return replace(run, start=x, hook_start=hook)
-    return replace(run, end=x, hook_end=hook)
+    return placed(side, run, x, end_hook(designed, support, run))
 
 
 def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
     """Return the hook of top bars at an end support: none where they develop straight."""
-    l_d = develop(designed.basis, bar_of(designed, run)).l_d
+    l_d = development_length(designed, run)
     if l_d <= available(designed, support) or not has_hooks(designed):
         return ""
     return "90"
@@ -316,10 +310,10 @@ class Work:
         support, side = support_of(span, near), other(near)
         runs = []
         for run in groups:
-            there = _placed(side, run, along(designed, span, near, own))
+            there = placed(side, run, along(designed, span, near, own))
             if designed.forces.has_span(support, near):
                 far = along(designed, span, near, -2 * designed.stock)
-                runs.append(_placed(near, there, far))
+                runs.append(placed(near, there, far))
             else:
                 runs.append(_end(designed, support, near, there, None))
         held = None
@@ -388,13 +382,13 @@ def _worst(work: Work, reaches: tuple[float, float]) -> float:
     bars = []
     for index, standing in enumerate(work.standing):
         t = reaches[0] if index < work.number else reaches[1]
-        run = _placed(side, standing.run, along(designed, span, near, t))
+        run = placed(side, standing.run, along(designed, span, near, t))
         bars.append(replace(standing, run=run))
     if work.holder is not None:
         held = holder(designed, span, near, reaches[0])
         if held.size == bars[0].run.size:  # they will be one bar with the corners
             far = held.end if side == "right" else held.start
-            bars[0] = replace(bars[0], run=_placed(side, bars[0].run, far))
+            bars[0] = replace(bars[0], run=placed(side, bars[0].run, far))
         else:
             bars.append(replace(work.holder, run=held))
     half = half_of(designed, span, near)
