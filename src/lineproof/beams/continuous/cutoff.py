@@ -38,7 +38,7 @@ from lineproof.beams.continuous.resistance_demand import (
 from lineproof.standards.a23_3 import cutoff as clause
 
 STEP = 50.0
-"""Ends of bars stand on this module from the axis of a support, to the safe side."""
+"""Ends of bars stand on this module [mm] from the axis of a support, to the safe side."""
 DESIGN_STATIONS = 101
 MARGIN = 0.998
 """Ratio kept at design, so that stations between those looked at are covered too."""

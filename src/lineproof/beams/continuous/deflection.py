@@ -67,9 +67,9 @@ class Behind:
 class SpanSection:
     """What bends: sizes and materials of one span, its sections at midspan and at both axes.
 
-    ``left`` or ``right`` is None at a simple end and at a free end; ``midspan`` is None in a
-    cantilever. ``top`` is the web with the top bars at midspan, for spans that hog
-    there. ``h_f`` is 0 without a flange.
+    N, mm, MPa. ``left`` or ``right`` is None at a simple end and at a free end; ``midspan`` is None
+    in a cantilever. ``top`` is the web with the top bars at midspan, for spans that hog there.
+    ``h_f`` is 0 without a flange.
     """
 
     l: float

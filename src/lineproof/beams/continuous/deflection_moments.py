@@ -54,15 +54,6 @@ def stage_sums(
     return record
 
 
-def bound_moments(entries: Mapping[Stage, Mapping[str, Entry]]) -> Moments:
-    """Return moments of the stages that have been recorded elsewhere."""
-
-    def record(steps: Steps, stage: Stage) -> None:
-        steps.bind(**entries[stage])
-
-    return record
-
-
 def given_moments(service: ServiceMoments, source: str, symbols: tuple[str, ...]) -> Moments:
     """Return moments of the stages as given values, such as those of an office's own analysis.
 

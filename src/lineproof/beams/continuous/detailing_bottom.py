@@ -52,9 +52,11 @@ from lineproof.beams.continuous.resistance_demand import demand_at, end_tension
 from lineproof.standards.a23_3 import cutoff as clause
 
 CORNERS = 2
+"""Bars in the corners of the stirrups, which run through."""
 INTO_SUPPORT = 150.0
+"""Length of bottom bars inside an interior support [mm] (12.11.1)."""
 LEAST_SAVED = 500.0
-"""Bars are cut only where a cut saves this length at that end."""
+"""Bars are cut only where a cut saves this length at that end [mm]."""
 SIDES: tuple[End, End] = ("left", "right")
 
 

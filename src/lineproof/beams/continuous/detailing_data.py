@@ -21,7 +21,9 @@ Expression = Literal["table", "general"]
 THETA = 35.0
 """Angle of the diagonal compression where no shear design says otherwise [deg]."""
 STOCK = 12_000.0
+"""Longest bar [mm] where nothing else is said."""
 END_COVER = 50.0
+"""Concrete outside of the bars at the ends of the beam [mm] where nothing else is said."""
 
 
 @dataclass(frozen=True, slots=True)
