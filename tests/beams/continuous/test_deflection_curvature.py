@@ -105,6 +105,10 @@ def test_shapes_are_those_of_the_stages() -> None:
     assert made.immediate[middle] == pytest.approx(found.stages["all"].delta, rel=0.25)
     assert made.attached[middle] == pytest.approx(found.attached, rel=0.25)
     assert made.total[middle] == pytest.approx(found.total, rel=0.25)
+    # zeta_s: S = 2.0 in the end and 1.0 at three months, no compression bars: 3.0 and 2.0, so
+    # total - attached = (3.0 - (3.0 - 2.0)) sustained; sustained alone is what rest leaves over
+    sustained = made.immediate - (made.total - 3.0 * (made.total - made.attached) / 2.0)
+    assert (made.total - made.attached) / 2.0 == pytest.approx(sustained, abs=1e-9)
     assert made.x[-1] == 9200
 
 

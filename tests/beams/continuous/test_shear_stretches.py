@@ -1,0 +1,54 @@
+"""What shear is told of bars and supports, by hand: bars at a lap, an assumed restraint."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import pytest
+
+from lineproof.beams.bars import BarLayer
+from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import stand
+from lineproof.beams.continuous.shear_stretches import bars_over, span_numbers
+
+from .flow import CALLS, run, start
+from .laid import beam_of
+
+
+@pytest.mark.parametrize("more", [0.0, 800.0])
+def test_lapped_bars_count_as_one_all_along(more: float) -> None:
+    """2-25M lapped with 2-25M over class B, 1.3 x 766.7 = 996.7 mm, or more: 1000 mm2 everywhere.
+
+    The one changes over to the other at the middle of the overlap. At d_v from the face, 682 mm
+    from the axis, the bars reach back 832 mm, more than l_d.
+    """
+    four = (BarLayer(4, "25M"),)
+    bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
+    designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
+    overlap = 1.3 * 0.45 * 400 / 35**0.5 * 25.2 + more
+    runs = [
+        BarRun("bottom", 1, 2, "25M", -150.0, 3000.0 + overlap),
+        BarRun("bottom", 1, 2, "25M", 3000.0, 7150.0),
+    ]
+    found = bars_over(designed, stand(designed, runs), "bottom", 1)
+    assert (found[0].start, found[-1].end) == (0.0, 7000.0)
+    assert [over.area for over in found] == pytest.approx([1000.0] * len(found))
+    middle = 3000.0 + overlap / 2
+    assert [share.run for over in found if over.end <= middle + 1 for share in over.shares] == [
+        runs[0] for over in found if over.end <= middle + 1
+    ]
+
+
+def test_an_assumed_restraint_adds_its_moment_over_the_span() -> None:
+    """Girders at the ends: w l^2/24 over l, on the outer sides of the end spans alone.
+
+    D 20.3736 kN/m (slab 10.416, web 4.3776, 1.8 x 3.1), L 4.8 x 3.1 = 14.88 kN/m:
+    w_f = 1.25 x 20.3736 + 1.5 x 14.88 = 47.787 kN/m; 47.787 x 7.6/24 = 15.1326 kN.
+    """
+    beam = start()
+    run(beam, CALLS[:4])
+    design = beam.design
+    numbers = span_numbers(design.model, design.designed, design.runs)
+    found = [x for each in numbers for x in (each.left.restraint, each.right.restraint)]
+    assert found == pytest.approx([15132.6, 0, 0, 0, 0, 15132.6], abs=0.1)
