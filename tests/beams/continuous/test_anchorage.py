@@ -178,6 +178,6 @@ def test_ties_earn_nothing_where_top_bars_stand_in_the_overhangs() -> None:
     assert hook_at(bare, 1, "25M", spread=True).l_dh == pytest.approx(425.96, abs=0.1)
     sheet = sheet_of(spread)
     with sheet.part("hook", "Hook"):
-        place = record_hook(writers_of(sheet, spread), {}, 1, "25M")
+        place = record_hook(writers_of(sheet, spread), {}, 1, "25M", 75.0)
         assert place["l_dh"].value == pytest.approx(425.96, abs=0.1)
         assert place["k_ht"].value == 1.0

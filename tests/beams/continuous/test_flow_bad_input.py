@@ -278,8 +278,8 @@ def test_a_construction_stage_beside_single_live_loads() -> None:
 
 
 def test_a_span_whose_middle_hogs_and_cracks_without_bars_through() -> None:
-    """Bars given of two sizes meet at midspan of 3.5 m, where neither counts in full."""
-    beam = start(spans=["3.5 m", "9 m", "3.5 m"], top_bars=["2-15M", None, None, "2-15M"])
+    """Thick bars given at the end of 3.5 m are not developed at its midspan, where others end."""
+    beam = start(spans=["3.5 m", "9 m", "3.5 m"], top_bars=["2-35M", None, None, "2-15M"])
     run(beam, CALLS[: CALLS.index("deflections")])
     with pytest.raises(UserError) as caught:
         beam.deflections()
@@ -360,4 +360,18 @@ def test_columns_that_are_no_columns_or_wider_than_their_support() -> None:
         refused_at_start(columns={2: ["900 mm x 450 mm x 3.6 m"]}),
         "supports, support 2: 'column 450 mm' has columns of 900 mm along the beam; write "
         "'column 900 mm', or columns of 450 mm",
+    )
+
+
+def test_inputs_that_would_change_nothing_are_refused() -> None:
+    matches(
+        refused_at_start(torsion="equilibrium"),
+        "torsion: 'equilibrium' is given, but nothing turns the beam; write torques = {'D': "
+        "'5.5 kN.m/m'}, or leave torsion out",
+    )
+    matches(
+        refused_at_start(
+            shape="rectangular", h_f=None, floor_weight="3.4 kPa", slab_bars="2 x 10M at 300 mm"
+        ),
+        "slab_bars: a rectangular beam has no flange; leave slab_bars out",
     )

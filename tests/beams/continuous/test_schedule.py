@@ -319,7 +319,7 @@ def test_printed_sums_follow() -> None:
     *lines, total = table.rows
     assert float(total[-1]) == pytest.approx(sum(float(row[-1]) for row in lines), abs=1e-9)
     for row in lines:
-        assert float(row[-1]) == pytest.approx(int(row[2]) * float(row[7]), abs=0.0501)
+        assert float(row[-1]) == pytest.approx(int(row[2]) * float(row[-2]), abs=0.0501)
     assert printed["Steel"] == float(total[-1])
     assert printed["Steel"] == pytest.approx(
         sum(mass for name, mass in printed.items() if name.startswith(("Steel 1", "Steel 2")))

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import dataclass
 from functools import lru_cache
 from typing import Any, Literal
@@ -250,6 +251,14 @@ def hook_at(
 def tie_spacing(d_b: float) -> float:
     """Return the spacing of ties around hooks: three bar diameters, down to a step of 5 mm."""
     return max(TIE_STEP, 3 * d_b // TIE_STEP * TIE_STEP)
+
+
+def ties_at(designed: Designed, runs: Iterable[BarRun], support: int) -> float:
+    """Return the spacing of the ties around all hooks in an end support; 0 where none are [mm]."""
+    name = "hook_start" if support == 1 else "hook_end"
+    sizes = {run.size for run in runs if getattr(run, name)}
+    found = [hook_at(designed, support, size) for size in sizes]
+    return min((hook.s_tie for hook in found if hook.tied), default=0.0)
 
 
 def has_hooks(designed: Designed) -> bool:

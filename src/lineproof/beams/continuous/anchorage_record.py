@@ -295,10 +295,11 @@ def _record_lap(
 
 
 def record_hook(
-    writers: Writers, place: Mapping[str, Entry], support: int, size: str
+    writers: Writers, place: Mapping[str, Entry], support: int, size: str, ties: float
 ) -> dict[str, Entry]:
     """Record inside the open part the hook of a bar at an end of the beam, with its checks.
 
+    ``ties`` is the spacing at which ties are laid around all hooks of the support [mm].
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     sheet, designed = writers.sheet, writers.designed
@@ -326,9 +327,9 @@ def record_hook(
     _record_hook_factors(steps, designed, reduced=reduced, tied=tied and not spread)
     steps.lines(basic, hooks.L_DH)
     if tied:
-        spacing = max(25.0, 3 * BARS.number(size, "d_b") // 25 * 25)
-        steps.bind(s_tie=sheet.given("s_tie", plain(spacing, "mm"), source="as laid"))
+        steps.bind(s_tie=sheet.given("s_tie", plain(ties, "mm"), source="as laid"))
         steps.check(hooks.TIED)
+        steps.check(hooks.TIES_CLEAR, a_max=sheet.find("a_max"))
     return steps.place
 
 

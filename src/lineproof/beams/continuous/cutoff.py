@@ -13,6 +13,7 @@ from typing import Literal, TypeVar
 
 import numpy as np
 
+from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.anchorage import development_length, holds, value
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
@@ -277,12 +278,22 @@ def zones_at(
     """Return by which rule of 12.10.5 bars may end at each of the distances."""
     x = np.array([local(designed, span, near, t) for t in places])
     M, V = designed.forces.along(span, x)
-    M_f = (M if face == "bottom" else -M).max(axis=0)
-    V_f = np.abs(V).max(axis=0)
+    M_face = M if face == "bottom" else -M
+    M_f, V_f = M_face.max(axis=0), shear_in_tension(M_face, V).max(axis=0)
     made: list[Zone] = []
     met = stretches_at(designed, np.array([along(designed, span, near, t) for t in places]))
     for stretch, moment, shear in zip(met, M_f.tolist(), V_f.tolist(), strict=True):
         made.append(_zone(designed, face, span, (moment, shear, stretch.V_r), continuing))
+    return made
+
+
+def shear_in_tension(M_face: Floats, V: Floats) -> Floats:
+    """Return the size of the shear of the cases that put a face in tension, zero of the others.
+
+    Bars end in a tension zone only in the cases that pull them. ``M_face`` [N.mm] is positive where
+    the face is in tension, of the shape of ``V`` [N].
+    """
+    made: Floats = np.where(M_face > NOTHING, np.abs(V), 0.0)
     return made
 
 

@@ -5,8 +5,6 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
-import numpy as np
-
 from lineproof.beams.continuous.anchorage import bar_of, development_length
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
 from lineproof.beams.continuous.cutoff import (
@@ -16,6 +14,7 @@ from lineproof.beams.continuous.cutoff import (
     full_moment,
     local,
     no_further_need,
+    shear_in_tension,
     zone_at,
 )
 from lineproof.beams.continuous.cutoff_ends import Runs, SideOf
@@ -178,10 +177,11 @@ def _note_compression(site: Site, t: float) -> None:
 
 
 def _rows_at(site: Site, t: float) -> tuple[int, int]:
-    """Return the cases of the largest moment of the face and of the largest shear at t."""
+    """Return the cases that govern at t: by moment, and by shear with the face in tension."""
     designed, side = site.writers.designed, site.side
     M, V = designed.forces.pairs(side.span, local(designed, side.span, side.near, t))
-    return int((M if side.face == "bottom" else -M).argmax()), int(np.abs(V).argmax())
+    M_face = M if side.face == "bottom" else -M
+    return int(M_face.argmax()), int(shear_in_tension(M_face, V).argmax())
 
 
 def _record_low_shear(site: Site, key: str, t: float) -> None:

@@ -7,6 +7,7 @@ from collections.abc import Mapping
 import numpy as np
 
 from lineproof.beams.bars import BarLayers, bars_text
+from lineproof.beams.continuous.anchorage import ties_at
 from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain, record_hook
 from lineproof.beams.continuous.cutoff import (
     Point,
@@ -261,10 +262,11 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
     designed, sheet = writers.designed, writers.sheet
     last = len(designed.outline.supports)
     for support, name in ((1, "hook_start"), (last, "hook_end")):
+        ties = ties_at(designed, runs, support)
         for size in sorted({run.size for run in runs if getattr(run, name)}):
             key = f"anchorage-end-{support}-hook-{size.lower()}"
             with sheet.part(key, f"Hooks of bars {size} at support {support}"):
-                place = record_hook(writers, {}, support, size)
+                place = record_hook(writers, {}, support, size, ties)
                 made[support, size] = place["l_dh"]
                 if designed.held(support):
                     _record_fit(writers, Steps(sheet, place), support)

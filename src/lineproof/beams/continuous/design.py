@@ -61,7 +61,7 @@ class Design:
     runs: tuple[BarRun, ...]
     stirrups: Choice
     raised: tuple[str, ...] = ()
-    """Bars that torsion asks for beyond what the moments do, in words."""
+    """Bars that torsion, or shear at a girder, asks for beyond what the moments do, in words."""
 
     @property
     def outline(self) -> BeamOutline:
@@ -94,7 +94,7 @@ def design_of(model: Model, pair: CodePair) -> Design:
         asked = further
         made = _designed(model, pair, basis, (given, *sections), asked, made)
     raise UserError(
-        "torques: no bars were found that carry moment, shear and torsion everywhere; write a "
+        "bars: none were found that carry moment, shear and torsion everywhere; write a "
         "wider or deeper beam, or the bars themselves as bar_runs"
     )
 
@@ -171,7 +171,7 @@ def _worse(first: Stirrups, second: Stirrups) -> Stirrups:
 
 
 def _raised(first: Design, made: Design) -> tuple[str, ...]:
-    """Say which bars torsion asks for beyond what the moments do."""
+    """Say which bars torsion or shear asks for beyond what the moments do."""
     told = [
         f"{where}: {_text(now.bars)}, by the moments alone {_text(was.bars)}"
         for before, after in ((first.bottom, made.bottom), (first.top, made.top))

@@ -135,11 +135,12 @@ def _counts(T: np.ndarray, T_cr: float) -> np.ndarray:
 
 
 def lacks(checks: Sequence[SpanCheck]) -> Iterator[Lack]:
-    """Give the stations at which bars lack for torsion, the worst of each half of a span."""
+    """Give the stations at which bars lack for torsion, or for shear at the face of a girder.
+
+    The worst of each half of a span.
+    """
     for check in checks:
         state, span = check.state, check.state.numbers.span
-        if not state.v["counts"].any():
-            continue
         near = _nearest(check)
         faces: tuple[Face, Face] = ("bottom", "top")
         for face, (needed, area) in zip(faces, check.bar_areas(), strict=True):

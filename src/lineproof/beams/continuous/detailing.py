@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.continuous.anchorage import hook_at
+from lineproof.beams.continuous.anchorage import ties_at
 from lineproof.beams.continuous.cutoff import DESIGN_STATIONS, Frame
 from lineproof.beams.continuous.detailing_bottom import lay_bottom
 from lineproof.beams.continuous.detailing_data import Designed
@@ -25,10 +25,8 @@ def hook_ties(designed: Designed, runs: tuple[BarRun, ...]) -> tuple[StirrupZone
     """Return the ties around hooks of small cover in the end supports (12.5.4)."""
     made = []
     last = len(designed.outline.supports)
-    for support, hooks in ((1, "hook_start"), (last, "hook_end")):
-        sizes = {run.size for run in runs if getattr(run, hooks)}
-        found = [hook_at(designed, support, size) for size in sizes]
-        spacing = min((hook.s_tie for hook in found if hook.tied), default=0.0)
+    for support in (1, last):
+        spacing = ties_at(designed, runs, support)
         if not spacing or not designed.held(support):
             continue
         width = designed.outline.supports[support - 1].width - designed.end_cover

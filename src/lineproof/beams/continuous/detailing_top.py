@@ -263,13 +263,15 @@ def _lengthened(work: Work, long: float, short: float, most: float) -> tuple[flo
 def _meeting(work: Work) -> float:
     """Return where bars end that meet those of the next support: past midspan by half a lap.
 
-    They go on to where those of the next support do alone, if that is further.
+    They go on to where the long bars of the next support do alone, if that is further: its short
+    ones may end before.
     """
     designed, span, near = work.frame.designed, work.span, work.near
     length = designed.outline.lengths[span - 1]
     lap = max(lap_length(designed, run) for run in work.groups)
     t = ceil50(length / 2 + lap / 2)
     beyond = groups_of(designed, support_of(span, other(near)))
+    beyond = beyond[: long_of(beyond)]
     point = no_further_need(
         work.frame, "top", span, near, full_moment(designed, "top", span, beyond)
     )

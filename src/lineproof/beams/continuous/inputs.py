@@ -305,6 +305,8 @@ def _check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Fau
             f"h_f: {echo(given['h_f'])} is not thicker than its cover of {echo(given['cover'])}; "
             "write a thicker slab"
         )
+    if shape == "rectangular" and given["slab_bars"] is not None:
+        faults.add("slab_bars: a rectangular beam has no flange; leave slab_bars out")
     spacing, b_w = fields["spacing"], fields["b_w"]
     if shape != "rectangular" and None not in (spacing, b_w) and spacing.value <= b_w.value:
         faults.add(
@@ -347,7 +349,12 @@ def _check_method(fields: Mapping[str, Any], faults: FaultList) -> None:
 
 
 def _check_torques(fields: Mapping[str, Any], faults: FaultList) -> None:
-    """Refuse torques of load types that the beam does not carry."""
+    """Refuse torques of load types that the beam does not carry, and torsion without torques."""
+    if fields["torsion"] == "equilibrium" and not fields["torques"] and not fields["forces_file"]:
+        faults.add(
+            "torsion: 'equilibrium' is given, but nothing turns the beam; write torques = {'D': "
+            "'5.5 kN.m/m'}, or leave torsion out"
+        )
     if fields["use"] is None or fields.get("loads") is None:
         return
     live = "L_st" if fields["use"] in STORED else "L"

@@ -30,7 +30,8 @@ class PrintedTable:
 def bar_table(bars: Schedule) -> PrintedTable:
     """Return the bar schedule, its total mass in the last row."""
     columns = (
-        "Mark", "Size", "Number", "Cut length, mm", "Shape", "Code", "Legs, mm", "kg each", "kg",
+        "Mark", "Size", "Number", "Cut length, mm", "Shape", "Code", "Legs, mm", "For",
+        "kg each", "kg",
     )  # fmt: skip
     rows = [_bar_row(item) for item in bars.items]
     rows.append(("Total", *[""] * (len(columns) - 2), f"{bars.mass:.1f}"))
@@ -41,7 +42,8 @@ def _bar_row(item: BarItem) -> tuple[str, ...]:
     shape = item.shape
     return (
         item.mark, item.size, str(item.number), f"{shape.cut:.0f}", shape.words,
-        shape.code or DASH, shape.legs_text or DASH, f"{shape.mass:.3f}", f"{item.mass:.1f}",
+        shape.code or DASH, shape.legs_text or DASH, "; ".join(item.serves) or DASH,
+        f"{shape.mass:.3f}", f"{item.mass:.1f}",
     )  # fmt: skip
 
 

@@ -45,6 +45,11 @@ from lineproof.standards.a23_3 import bars, shear
 from lineproof.standards.a23_3.bars import BARS
 
 STIRRUPS = "stirrups"
+MORE_BARS = "More bars than the moments ask for: {}."
+AT_GIRDER = (
+    "Where a girder carries the beam from the side, the bars carry moment and shear together at "
+    "its face."
+)
 _SAME = 1e-9
 THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
@@ -75,6 +80,9 @@ def record_shear(design: Design) -> None:
     sheet = model.sheet
     with sheet.part(STIRRUPS, "Stirrups"):
         alike = record_stirrups(Steps(sheet, {}), choice, design.outline)
+        if design.raised and not design.designed.torsion:
+            text = f"{MORE_BARS.format('; '.join(design.raised))} {AT_GIRDER}"
+            sheet.note("more-bars", text, title="Bars along the beam", clause="11.3.9")
     torsion = _record_torsion(design, alike)
     for row in choice.sections:
         for section in row:
@@ -114,7 +122,7 @@ def _note_bars(steps: Steps, design: Design) -> None:
         return
     text = THROUGH
     if design.raised:
-        text = f"{text} More bars than the moments ask for: {'; '.join(design.raised)}."
+        text = f"{text} {MORE_BARS.format('; '.join(design.raised))}"
     steps.sheet.note(
         "bars-with-torsion", text, title="Bars along the beam", clause="11.3.10.6",
         basis=COMMON_PRACTICE,

@@ -178,26 +178,34 @@ class SpanCheck:
         ends = np.where(self.state.columns < sum(self.state.faces) / 2, 0, last)
         where = np.where(nearer, ends, where)
         bottom, top = (
-            np.take_along_axis(force, where, axis=1).max(axis=0) for force in self._by_face()
+            np.take_along_axis(force, where, axis=1).max(axis=0)
+            for force in self._by_face(self.state.v["counts"])
         )
         return self.state.columns, bottom, top
 
     def bar_areas(self) -> tuple[tuple[Floats, Floats], tuple[Floats, Floats]]:
-        """Return the area that bottom and top bars need for torsion, and that which counts [mm2].
+        """Return the area that bottom and top bars need, and that which counts [mm2].
 
-        By case and column; the area needed is zero where torsion does not count, and nearer to a
-        support than a critical section.
+        By case and column. Zero is needed nearer to a support than a critical section, and where
+        torsion does not count, but for the tension side at a face that a girder holds: there no
+        longer bars stand for the shear, and the largest moment is no cap (11.3.9.4).
         """
         v, force = self.state.v, self.state.basis.phi_s * self.state.basis.f_y
         there = np.where(v["bottom"], v["A_sp"], v["A_s"])
         here = np.where(v["bottom"], v["A_s"], v["A_sp"])
-        bottom, top = (np.where(self.state.nearer, 0.0, F / force) for F in self._by_face())
+        asked = v["counts"].copy()
+        for column, end in ((0, self.state.numbers.left), (-1, self.state.numbers.right)):
+            asked[:, column] |= end.held == "indirect"
+        bottom, top = (np.where(self.state.nearer, 0.0, F / force) for F in self._by_face(asked))
         return (bottom, here), (top, there)
 
-    def _by_face(self) -> tuple[Floats, Floats]:
-        """Return the force in the bottom and in the top bars where torsion counts, by case."""
+    def _by_face(self, asked: Truths) -> tuple[Floats, Floats]:
+        """Return the force in the bottom and in the top bars, by case, in [N].
+
+        That of the tension side where it is ``asked``, that of the other side for torsion.
+        """
         v = self.state.v
-        tension = np.where(v["counts"], self.bars["F_lt"], 0.0)
+        tension = np.where(asked, self.bars["F_lt"], 0.0)
         compression = np.where(v["counts"], self.bars["F_lc"], 0.0)
         bottom = np.where(v["bottom"], tension, compression)
         return bottom, np.where(v["bottom"], compression, tension)

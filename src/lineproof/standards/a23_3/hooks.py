@@ -8,7 +8,7 @@ from __future__ import annotations
 from functools import partial
 
 from lineproof.errors import UserError
-from lineproof.formula import FROM_MEMORY, Formula, criterion, formula
+from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, Formula, criterion, formula
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.notation import NOTATION
 from lineproof.standards.codes import CodePair
@@ -146,6 +146,15 @@ TIED = _criterion(
     no="The ties around the hooks are NOT close enough.",
     key="hook-ties",
 )
+TIES_CLEAR = _criterion(
+    "s_tie >= d_bs + 1.4*a_max",
+    clause="A23.1 6.6.5.2",
+    title="Clear space of the ties around hooks",
+    basis=COMMON_PRACTICE,
+    yes="The concrete passes between the ties.",
+    no="The concrete does NOT pass between the ties: thicker bars or a smaller aggregate.",
+    key="hook-ties-clear",
+)
 FITS = _criterion(
     "l_dh <= l_av",
     clause="12.5.1",
@@ -172,5 +181,5 @@ def basic_length(pair: CodePair) -> Formula:
 
 
 FORMULAS = (BASIC, L_DH, L_DH_EXCESS, SIDE_COVER, SIDE_COVER_COLUMN, FACE_COVER, AVAILABLE)
-CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, FITS)
+CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, TIES_CLEAR, FITS)
 TABLES = (COVER_FACTORS, TIE_FACTORS, DENSITY_FACTORS, COATING_FACTORS)
