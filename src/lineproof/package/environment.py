@@ -238,7 +238,7 @@ def _verdict(calc: Calc) -> str:
     """Say in one sentence whether the calc's checks hold."""
     count, failed = len(calc.summary), len(calc.failures)
     if not count:
-        return "No checks."
+        return "No checks of a member."
     if failed:
         return f"{failed} of {count} checks {'does' if failed == 1 else 'do'} not hold."
     return "The one check holds." if count == 1 else f"All {count} checks hold."

@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import datetime as dt
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from functools import partial
 from typing import Any
 
 from lineproof.errors import UserError
@@ -13,6 +14,7 @@ STATUSES = ("preliminary", "for review", "for permit", "for construction")
 FINAL_STATUSES = ("for permit", "for construction")
 PAPERS = {"letter": "us-letter", "us-letter": "us-letter", "a4": "a4"}
 _NO_DATE = dt.date(2000, 1, 1)
+_PLACE = ("grid", "level")
 
 
 @dataclass(frozen=True, slots=True)
@@ -59,8 +61,13 @@ class ProjectFacts:
     paper: str
 
 
-def project_facts(project: Mapping[str, Any], codes: Mapping[str, Any]) -> ProjectFacts:
-    """Read the facts of a project; raises :class:`UserError` for a wrong date or paper size."""
+def project_facts(
+    project: Mapping[str, Any], codes: Mapping[str, Any], calcs: Sequence[str] = ()
+) -> ProjectFacts:
+    """Read the facts of a project and of the calculations named.
+
+    Raises :class:`UserError` for a wrong date or paper size.
+    """
     facts = _Tables(project)
     date_text = facts.text("issue", "date")
     revisions = tuple(
@@ -69,7 +76,7 @@ def project_facts(project: Mapping[str, Any], codes: Mapping[str, Any]) -> Proje
     )
     return ProjectFacts(
         name=facts.text("project", "name"),
-        facts=_cover_facts(facts, codes),
+        facts=(*_cover_facts(facts, codes), *_locations(facts, calcs)),
         signatures=(
             Fact("Prepared by", facts.text("issue", "prepared_by")),
             Fact("Checked by", facts.text("issue", "checked_by")),
@@ -125,9 +132,22 @@ def _cover_facts(facts: _Tables, codes: Mapping[str, Any]) -> tuple[Fact, ...]:
         Fact("Codes", _pair(facts, codes)),
         Fact("Amendments", facts.text("codes", "amendments")),
         Fact("Importance category", facts.text("building", "importance")),
-        Fact("Grid", facts.text("location", "grid")),
-        Fact("Level", facts.text("location", "level")),
     )
+
+
+def _locations(facts: _Tables, calcs: Sequence[str]) -> tuple[Fact, ...]:
+    """Say where the calculations stand: one by grid and level, several a line each."""
+    rows = {_text(row, "calc"): row for row in facts.rows("locations")}
+    if len(calcs) > 1 and rows:
+        told = {calc: rows[calc] for calc in calcs if calc in rows}
+        return tuple(
+            Fact(f"Location of {calc}", "; ".join(filter(None, map(partial(_text, row), _PLACE))))
+            for calc, row in told.items()
+        )
+    if rows and calcs and calcs[0] not in rows:
+        return ()
+    place = rows[calcs[0]] if rows and calcs else facts.table("location")
+    return tuple(Fact(key.capitalize(), _text(place, key)) for key in _PLACE)
 
 
 def _pair(facts: _Tables, codes: Mapping[str, Any]) -> str:

@@ -126,7 +126,9 @@ def build_package(
     for place, (record, prefix) in enumerate(zip(data, _prefixes(data), strict=True)):
         walk = walks[place] if walks is not None else None
         calcs.append(_Builder(record, prefix, marks or {}, faults).calc(walk))
-    facts = project_facts(data[0]["project"], data[0]["codes"])
+    facts = project_facts(
+        data[0]["project"], data[0]["codes"], [each["calc"]["id"] for each in data]
+    )
     _check_status(facts.status, calcs, faults)
     faults.raise_if_any()
     return Package(

@@ -152,6 +152,8 @@ def unit_named(text: str) -> Unit:
     if found is None:
         near = _nearest(spelling)
         hint = f"; write {near}" if near else ""
+        if any(letter.isdigit() for letter in spelling[1:-1]) and " " in spelling:
+            hint = "; write one number with one unit, such as '26 in'"
         raise UserError(f"{text[:40]!r} is not a unit of the list{hint}")
     return found
 

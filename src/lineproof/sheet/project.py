@@ -18,13 +18,17 @@ KNOWN: dict[str, tuple[str, ...]] = {
     "codes": ("pair", "amendments"),
     "building": ("importance",),
     "location": ("grid", "level"),
+    "locations": ("calc", "grid", "level"),
     "issue": ("status", "date", "revision", "superseded", "prepared_by", "checked_by"),
     "paper": ("size",),
     "drawings": ("number", "revision", "title"),
     "revisions": ("letter", "date", "description"),
     "confirmed": ("clause", "edition", "value", "by", "on"),
 }
-"""The facts of a project by table; ``criteria`` holds whatever the office wants to state."""
+"""The facts of a project by table; ``criteria`` holds whatever the office wants to state.
+
+``location`` is that of the whole project, a row of ``locations`` that of one calculation.
+"""
 LARGEST_FILE = 1_000_000
 DEEPEST = 3
 
@@ -91,7 +95,7 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
         for table in tables
         if not isinstance(facts.get(table, {}), dict)
     ]
-    for rows in ("drawings", "revisions", "confirmed"):
+    for rows in ("drawings", "revisions", "locations", "confirmed"):
         given = facts.get(rows, [])
         if not (isinstance(given, list) and all(isinstance(row, dict) for row in given)):
             faults.append(f"{path}: {rows!r} must be a list of tables; write [[{rows}]]")

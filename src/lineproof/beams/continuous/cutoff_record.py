@@ -56,7 +56,7 @@ class Site:
         x = local(self.writers.designed, side.span, side.near, t)
         return self.writers.designed.forces.demand(side.span, x, side.near, row)
 
-    def given(self, symbol: str, t: float, source: str = "as laid") -> Entry:
+    def given(self, symbol: str, t: float, source: str = "as laid, lapped bars as one") -> Entry:
         """Record a distance from the near axis."""
         return self.writers.sheet.given(symbol, plain(t, "mm"), source=source)
 

@@ -15,8 +15,8 @@ from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 
 _HISTORY = (
-    "Parts that the span carries are attached {attached} after the load begins to act (input "
-    "attached_after); what has deflected by then is not counted for them. The load is sustained "
+    "Parts that the span carries are attached {attached} after the load begins to act; "
+    "what has deflected by then is not counted for them. The load is sustained "
     "for {final}."
 )
 _ROOT = (

@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
+
+import numpy as np
 
 from lineproof.beams.continuous.figure_along import Along, Curve, Mark, along_figure
 from lineproof.beams.continuous.layout import BeamOutline
@@ -50,6 +53,7 @@ def deflection_figure(
         for number, (curve, dash) in enumerate(zip(curves, DASHES, strict=False))
     )
     marks = tuple(_mark(curves, index) for index in range(len(spans)))
+    note = "Deflections not to the scale of the beam; the largest of each span, downward positive."
     return along_figure(
         outline,
         Along(
@@ -60,8 +64,7 @@ def deflection_figure(
             label=(("deflection, mm", "roman"),),
             unit="mm",
             downward=True,
-            note="Deflections not to the scale of the beam; the largest of each span, downward "
-            "positive.",
+            note=" ".join((note, *_coincident(curves))),
             height=42.0,
         ),
         caption,
@@ -84,3 +87,11 @@ def _mark(curves: Sequence[DeflectionCurve], index: int) -> Mark:
         name = f"({_letter(number)}) " if len(curves) > 1 else ""
         lines.append(((f"{name}{sign}{abs(value):.1f}", "roman"),))
     return Mark(place, value, tuple(lines))
+
+
+def _coincident(curves: Sequence[DeflectionCurve]) -> Iterator[str]:
+    """Say which curves lie on the one before, where a line of the legend cannot be seen."""
+    for number, (before, curve) in enumerate(pairwise(curves), start=1):
+        pairs = zip(before.pieces, curve.pieces, strict=True)
+        if all(np.allclose(a.w, b.w, rtol=1e-3, atol=1e-3) for a, b in pairs):
+            yield f"({_letter(number)}) coincides with ({_letter(number - 1)})."

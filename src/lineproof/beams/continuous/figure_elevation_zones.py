@@ -66,7 +66,8 @@ def zone_block(view: View, zones: Sequence[StirrupZone], top: float) -> tuple[li
 def _names(zone: StirrupZone) -> tuple[Runs, Runs]:
     """Two lines: number, size and spacing; mark and length."""
     mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
-    return ((_count(zone), "roman"),), (*mark, (f"{zone.end - zone.start:.0f}", "roman"))
+    length = f"{zone.end - zone.start:.0f}" if zone.number > 1 else ""
+    return ((_count(zone), "roman"),), (*mark, (length, "roman"))
 
 
 def _count(zone: StirrupZone) -> str:
@@ -77,7 +78,8 @@ def _count(zone: StirrupZone) -> str:
 
 def _one_line(zone: StirrupZone) -> Runs:
     mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
-    return (*mark, (f"{_count(zone)} = {zone.end - zone.start:.0f}", "roman"))
+    length = f" = {zone.end - zone.start:.0f}" if zone.number > 1 else ""
+    return (*mark, (f"{_count(zone)}{length}", "roman"))
 
 
 def _in_one_row(names: Sequence[tuple[Runs, Runs]], middles: Sequence[float]) -> list[float]:

@@ -19,6 +19,7 @@ from lineproof.beams.continuous.bar_choice import (
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.numbers import Numbers
 from lineproof.beams.continuous.restraint import held_in_frame, record_restraint, restraint_moment
@@ -277,6 +278,13 @@ def _top_length(model: Model, support: int) -> float:
     return float(sum(model.lengths[k - 1].value for k in beside)) / 3
 
 
+def _origin(inputs: ContinuousInputs, bars: object) -> str:
+    """Say where the bars of a section come from."""
+    if inputs.bar_runs is not None:
+        return "as given along the beam"
+    return "given" if bars is not None else CHOSEN
+
+
 # -- lines -----------------------------------------------------------------------------------
 
 
@@ -284,7 +292,7 @@ def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> No
     """Record a span's largest moment, its bottom bars, their resistance and all checks."""
     sheet, inputs = model.sheet, model.inputs
     demand = model.forces.sag(span)
-    origin = "given" if inputs.bottom_bars[span - 1] is not None else CHOSEN
+    origin = _origin(inputs, inputs.bottom_bars[span - 1])
     with sheet.part(f"sag-{span}", f"Span {span}: moment in the span"):
         steps = _steps(model, span, "b_f" if inputs.slab else "b_w")
         near = _nearer(model, demand)
@@ -422,8 +430,7 @@ def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:
 
 def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> None:
     sheet, inputs = model.sheet, model.inputs
-    given = inputs.top_bars[face.support - 1] is not None
-    origin = "given" if given else CHOSEN
+    origin = _origin(inputs, inputs.top_bars[face.support - 1])
     sheet.note("bars-text", f"Top bars: {top}, {origin}.", title="Bars")
     entries = {
         "d_bs": sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b"),

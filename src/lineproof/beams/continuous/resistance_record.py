@@ -57,7 +57,7 @@ METHOD = (
     "Every bar counts in proportion to the distance from its end, in full from its development "
     "length on; a hook from its outside over its own length; like bars that are lapped count as "
     "one. The bars carry the moment of every load case, and with the shear of the same case the "
-    "tension (M/dv + (V - 0.5 Vs) cot θ, Vs at most V), which need not exceed what the largest "
+    "tension of 11.3.9.2, which need not exceed what the largest "
     "moment of that face needs alone. Compression bars are not counted. Looked at: {count} "
     "stations a span and wherever the shear jumps."
 )
@@ -302,7 +302,9 @@ def _record_cap(writers: Writers, station: Station, end: End) -> Entry:
     demand = largest_at(designed, face, station.span, end)
     length = designed.outline.lengths[station.span - 1]
     near: End = "left" if demand.x <= length / 2 else "right"
-    t = demand.x if near == "left" else length - demand.x
+    t = float(round(demand.x if near == "left" else length - demand.x))  # flat there: 1 mm is near
+    at = t if near == "left" else length - t
+    demand = designed.forces.demand(station.span, at, demand.side, demand.row)
     title = f"{face.capitalize()} bars: what the largest moment of span {station.span} needs alone"
     with sheet.part(f"{COVERAGE}-{face}-largest", title):
         steps = begin(writers, sheet, station.span, face)

@@ -9,7 +9,8 @@ from lineproof.standards.a23_3 import shear_bars, torsion
 
 _ALONG = (
     "Along the span the bars reach past the point where the moment alone needs them by "
-    "d_v cot(θ) at least, which stands for the force that shear adds (11.3.9.1)."
+    "at least the effective shear depth times cot θ, which stands for the force that shear adds "
+    "(11.3.9.1)."
 )
 
 

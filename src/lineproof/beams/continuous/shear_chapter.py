@@ -58,8 +58,9 @@ THROUGH = (
 )
 
 _RESTRAINT = (
-    "The moment of restraint assumed for the top bars at this end adds M_f/l to the shear and the "
-    "reaction here; at the far support it takes as much away, which is not counted."
+    "The moment of restraint assumed for the top bars at this end adds to the shear and the "
+    "reaction here what holds it in balance over the span; at the far support it takes as much "
+    "away, which is not counted."
 )
 
 

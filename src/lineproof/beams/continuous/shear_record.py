@@ -21,7 +21,7 @@ _AT_FACE = {
     "free": "The end is free: the shear is taken at the end itself.",
 }
 _AT_D_V = "The support presses on the beam from below{loads}: sections nearer to the support than "
-_AT_D_V += "d_v are designed for the shear at d_v from its face."
+_AT_D_V += "the effective shear depth are designed for the shear at that distance from its face."
 _OUT_OF_RANGE = (
     "The strain lies outside the range of the general method: no resistance is given, and the "
     "section does NOT hold. More bars on the face in tension, or a deeper beam."
@@ -63,7 +63,7 @@ def record_place(steps: Steps, section: ShearSection) -> Entry:
         )
         small = bool(steps.decide(shear.NEAR_POINT_LOADS, V_pl=V_pl))
     if small:
-        what = "" if section.V_pl > 0 else " and no point load stands within d_v of its face"
+        what = "" if section.V_pl > 0 else " and no point load stands nearer to its face"
         _note_place(steps, _AT_D_V.format(loads=what))
     return steps.line(shear.CRITICAL_AT_D_V if small else shear.CRITICAL_AT_FACE)
 
@@ -215,8 +215,8 @@ def _record_other(steps: Steps, basis: ShearBasis) -> None:
     other = "simplified" if basis.method == "general" else "general"
     _note_other(
         steps,
-        f"For information: the {other} method gives V_r of {V_r.value / 1000:.0f} kN; the beam is "
-        f"designed by the {basis.method} method.",
+        f"For information: the {other} method gives a resistance of "
+        f"{V_r.value / 1000:.0f} kN; the beam is designed by the {basis.method} method.",
     )
 
 

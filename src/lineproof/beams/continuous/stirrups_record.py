@@ -14,8 +14,8 @@ from lineproof.standards.a23_3 import bars, shear, shear_bars
 _FIRST = (
     "The first stirrup stands about half a spacing from the face of the support, at most 75 mm. "
     "Spacings are steps of 25 mm, at most one near the supports and one between, alike over the "
-    "beam, then of least mass. Stirrups are nowhere below the minimum, whether V_f exceeds V_c or "
-    "not."
+    "beam, then of least mass. Stirrups are nowhere below the minimum, also where the concrete "
+    "alone would carry the shear."
 )
 _GIVEN = "The stirrups are as given and checked as they stand."
 _STATIONS = (

@@ -17,11 +17,11 @@ from lineproof.standards.a23_3 import torsion as clause
 
 _HELD = (
     "The ends of the span are held against turning at the faces of the supports: the torque of "
-    "each half goes to the nearer support, and T = t (l_n/2 - x)."
+    "each half goes to the nearer support, and the torsion is zero at midspan."
 )
 _HELD_ONCE = (
     "The span is held against turning at the face of its support only: the torque beyond a section "
-    "passes through it, and T = t (l_n - x)."
+    "passes through it, and the torsion is zero at the free end."
 )
 _EQUILIBRIUM = "The torsion is needed for equilibrium: all of it is designed for."
 _COMPATIBILITY = (

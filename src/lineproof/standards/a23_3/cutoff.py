@@ -183,7 +183,7 @@ PAST_INFLECTION = _formula(
 LIMIT = _formula(
     "l_lim = M_r/V_f + l_a",
     clause="12.11.3",
-    title="Largest development length, bars of M_r continuing there",
+    title="Largest development length of the bars that go on there",
     basis=FROM_MEMORY,
 )
 LIMIT_CONFINED = _formula(

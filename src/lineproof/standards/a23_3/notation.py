@@ -163,7 +163,7 @@ _ROWS = (
     ("A_ly", "A", "ly", "", "area of one layer of crack-control bars", "mm2"),
     ("a_g", "a", "g", "", "aggregate size that counts for shear", "mm"),
     ("F_lt", "F", "ℓt", "", "force in the bars on the tension side, with shear", "kN"),
-    ("F_ltc", "F", "ℓt,c", "", "F_lt, at most the tension at the largest moment", "kN"),
+    ("F_ltc", "F", "ℓt,c", "", "force on the tension side, at most by moment alone", "kN"),
     ("F_lc", "F", "ℓc", "", "force in the bars on the compression side, with shear", "kN"),
     ("F_le", "F", "ℓe", "", "force in the bottom bars at an exterior support", "kN"),
     ("A_lt", "A", "ℓt", "", "area of bars for the force on the tension side", "mm2"),

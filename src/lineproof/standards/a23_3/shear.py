@@ -48,7 +48,7 @@ D_V = _formula(
 CRITICAL_AT_D_V = _formula(
     "x_f = b_sn/2 + d_v",
     clause="11.3.2",
-    title="Section considered, d_v from the face of the support",
+    title="Section considered, the effective shear depth from the face of the support",
     basis=SHEAR_2004,
 )
 CRITICAL_AT_FACE = _formula(
