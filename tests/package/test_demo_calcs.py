@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import io
+import re
 from typing import Any
 
 import pypdf
@@ -49,3 +50,28 @@ def test_every_drawing_is_opened_without_a_fault(calc: Any) -> None:
         audit = document.audit()
         assert (audit.errors, audit.fixes) == ([], []), name
         assert len(document.modelspace().query("DIMENSION")) > 0, name
+
+
+def test_no_symbol_is_printed_raw(calc: Any) -> None:
+    """Words of notes and titles say ``the effective depth``, not ``d_v``; formulas are set."""
+    raw = [
+        text
+        for part in calc.record.data["parts"]
+        for entry in part["entries"]
+        for text in (part["title"], entry.get("title", ""), entry.get("text", ""))
+        if entry["kind"] != "prose" and re.search(r"\b[A-Za-z]+_[A-Za-z0-9]+\b", text)
+    ]
+    # a lateral storage case takes the name that its load has in the list of loads
+    assert [text for text in raw if not re.search(r"L_st|S_[a-z]", text)] == []
+
+
+def test_bars_as_built_are_not_called_chosen(calc: Any) -> None:
+    """Bars told along the beam are given; where none are told, they are chosen."""
+    origins = {
+        "given" if "given along the beam" in entry["text"] else "chosen"
+        for part in calc.record.data["parts"]
+        for entry in part["entries"]
+        if entry["kind"] == "note" and entry.get("title") == "Bars"
+        and part["key"].startswith(("sag-", "hog-"))
+    }  # fmt: skip
+    assert origins == {"given" if "existing" in calc.name else "chosen"}

@@ -94,6 +94,25 @@ def test_facts_survive_a_project_of_another_shape() -> None:
     assert [fact.value for fact in facts.facts if fact.label == "Codes"] == ["NBC 2015 + A23.3-14"]
 
 
+def test_every_calculation_says_where_its_beam_stands() -> None:
+    """A row of ``locations`` for each; the place of the project where there are no rows."""
+    rows = {"locations": [{"calc": "B7", "grid": "C/2-5", "level": "2"},
+                          {"calc": "B12", "grid": "A/2-4"}]}  # fmt: skip
+
+    def said(project: Record, *calcs: str) -> dict[str, str]:
+        facts = project_facts(project, {}, calcs).facts
+        return {
+            f.label: f.value for f in facts if f.label.startswith(("Location", "Grid", "Level"))
+        }
+
+    assert said(rows, "B7") == {"Grid": "C/2-5", "Level": "2"}
+    assert said(rows, "B7", "B12", "B9") == {
+        "Location of B7": "C/2-5; 2", "Location of B12": "A/2-4",
+    }  # fmt: skip
+    assert said(rows, "B9") == {}
+    assert said({"location": {"grid": "D"}}, "B7") == {"Grid": "D", "Level": ""}
+
+
 def test_running_heads_are_cut() -> None:
     """An ellipsis shows that something is missing."""
     assert cut("short", 10) == "short"

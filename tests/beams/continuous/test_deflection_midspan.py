@@ -28,14 +28,15 @@ SHORT_ENDS = ("3 m", "9.2 m", "3 m")
 SHORT_MIDDLE = ("9 m", "4 m", "9 m")
 BY_HAND: dict[tuple[str, ...], dict[int, tuple[int, int, float]]] = {
     SHORT_ENDS: {1: (9, 200, 16.0), 3: (9, 200, 16.0)},
-    SHORT_MIDDLE: {2: (6, 300, 19.5)},
+    SHORT_MIDDLE: {2: (10, 300, 19.5)},
 }
 """Spans that hog: bars through midspan as laid out by hand from the schedule, area, diameter.
 
 Short end spans, midspan at 1500: 2-15M to the outer end, 3-15M and 4-15M in the overhangs over
 support 2, which start at 950, are developed (l_d 529 and 407); 2-15M of the overhangs at support 1
-end at 1850 and are not. Short middle span, midspan at 11000: 2-20M run through, 2-20M are lapped
-in the web and 2-20M in the overhangs, from 10550 to 11450: each lap is one set of bars.
+end at 1850 and are not. Short middle span, midspan at 11000: 2-20M run through from 6500 to 15500;
+4-20M of 5900 over either support, half to each side, end 950 past midspan. With l_d of
+0.45 1.3 0.8 400/sqrt(32) 19.5 = 645 all of these 8 are developed to both sides and count.
 """
 
 

@@ -196,8 +196,10 @@ def test_recorded_worst_stations_are_the_numbers(designed: Designed) -> None:
                 (s for s in found.by_tension if s.face == face),
                 key=lambda s: s.F / s.F_r if s.F_r else 0.0,
             )
-            force = made["F_ltc"] if "F_ltc" in made else made["F_lt"]
-            assert force.value == pytest.approx(worst.F, rel=1e-9)
+            # the cap is that of the flat top of the moment, recorded within half a millimetre of
+            # it: w (0.5)^2/2 of a moment is less than 1e-7 of the force
+            force, near = (made["F_ltc"], 1e-7) if "F_ltc" in made else (made["F_lt"], 1e-9)
+            assert force.value == pytest.approx(worst.F, rel=near)
             assert 340 * made["A_sd"].value == pytest.approx(worst.F_r, rel=1e-9)
 
 

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import pytest
 
 from lineproof.beams.analysis.model import (
@@ -196,6 +198,9 @@ def test_deflections() -> None:
     assert {"(a) immediate", "(b) total"} <= set(said)
     first = curves_of(figure)[0].points
     assert first[1][1] < first[0][1]
+    assert not any("coincides" in each for each in said)
+    twice = words_of(deflection_figure(beam, [curves[0], replace(curves[0], name="again")]))
+    assert any("(b) coincides with (a)." in each for each in twice)
     with pytest.raises(ValueError, match="5 deflected shapes"):
         deflection_figure(beam, curves[:1] * 5)
 

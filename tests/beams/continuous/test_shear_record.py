@@ -80,7 +80,7 @@ def test_every_check_of_an_end_is_printed() -> None:
         "bars-tension-side", "bars-end-support",
     }  # fmt: skip
     assert printed["shear-halves-spacing"]["kind"] == "decision"
-    assert "simplified method gives V_r" in printed["other-method"]["text"]
+    assert "simplified method gives a resistance of" in printed["other-method"]["text"]
     assert not any(name.endswith("_g") for name in entries(record, "shear-2-along"))
 
 

@@ -38,7 +38,7 @@ ROOM = 95.0
 TALLEST = 48.0
 REACH = 8.0
 """From the face of the web to the names of bars, mm on paper."""
-BELOW = 19.0
+BELOW = 16.0
 LINE = 4.6
 NEXT, FLANGE_OFFSET = 6.5, 4.5
 """From one dimension line to the next, and from the flange of a T to its thickness."""
