@@ -10,7 +10,7 @@ import pytest
 PACKAGE = Path(__file__).resolve().parents[1] / "src" / "lineproof"
 ROOMS = (
     "quantity", "formula", "record", "drawing", "sheet", "standards", "beams", "typeset",
-    "package", "notebook", "cli",
+    "package", "audit", "notebook", "cli",
 )  # fmt: skip
 FREE = ("errors", "resources")
 """Modules without dependencies, open to every room."""

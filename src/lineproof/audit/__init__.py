@@ -1,0 +1,1 @@
+"""Checking another engineer's work: claims, origins, slips, what is missing, review, proof."""

@@ -1,0 +1,121 @@
+"""What an audit works with: intervals of printed numbers, claims, judgements, slips. Plain data."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from decimal import Decimal
+from enum import StrEnum
+
+LEAST_DIGITS = 3
+"""Of a whole number such as 12300 so many digits count: the zeros behind them hold the place."""
+
+
+@dataclass(frozen=True, slots=True)
+class Interval:
+    """All numbers from low to high, in internal units."""
+
+    low: float
+    high: float
+
+    @property
+    def middle(self) -> float:
+        """The number in the middle."""
+        return (self.low + self.high) / 2
+
+    @property
+    def half(self) -> float:
+        """Half its width."""
+        return (self.high - self.low) / 2
+
+    def holds(self, value: float) -> bool:
+        """Tell whether a number lies inside; the last bits are nobody's to judge."""
+        slack = 1e-9 * max(abs(self.low), abs(self.high))
+        return self.low - slack <= value <= self.high + slack
+
+    def meets(self, other: Interval) -> bool:
+        """Tell whether two intervals have a number in common."""
+        slack = 1e-9 * max(abs(self.low), abs(self.high))
+        return self.low - slack <= other.high and other.low <= self.high + slack
+
+    def times(self, factor: float) -> Interval:
+        """Return the interval of numbers times a factor."""
+        ends = (self.low * factor, self.high * factor)
+        return Interval(min(ends), max(ends))
+
+
+def read_from(text: str) -> Interval:
+    """Return what a written number stands for: half a unit of its last digit to both sides.
+
+    >>> read_from("388"), read_from("0.50")
+    (Interval(low=387.5, high=388.5), Interval(low=0.495, high=0.505))
+    >>> read_from("12300")
+    Interval(low=12250.0, high=12350.0)
+    """
+    number = Decimal(text)
+    last = int(number.as_tuple().exponent)
+    if "." not in text and number:
+        whole = int(number.normalize().as_tuple().exponent)
+        last = max(min(last, 0), min(whole, number.adjusted() - LEAST_DIGITS + 1), 0)
+    half = Decimal(5).scaleb(last - 1)
+    return Interval(float(number - half), float(number + half))
+
+
+@dataclass(frozen=True, slots=True)
+class Claim:
+    """A value that somebody else wrote for a line: as typed, and what it stands for.
+
+    ``row`` is its row in the table that it came from, counted as the spreadsheet shows it.
+    """
+
+    id: str
+    typed: str
+    unit: str
+    value: float
+    stands_for: Interval
+    row: int = 0
+
+
+class Verdict(StrEnum):
+    """What is said of a line."""
+
+    AGREES = "agrees"
+    INPUT = "other input"
+    ORIGIN = "origin"
+    CARRIED = "carried"
+    UNIT = "unit slip"
+    OTHER_METHOD = "other valid method"
+    SAFE_ROUNDING = "conservative rounding"
+    UNSAFE_ROUNDING = "unconservative rounding"
+    NOT_CLAIMED = "not claimed"
+    UNKNOWN = "unknown"
+
+
+@dataclass(frozen=True, slots=True)
+class Slip:
+    """One slip that reproduces a claimed value: its kind, the checker's sentence, its value.
+
+    ``likely`` orders slips of one line, the most plausible first; it is no probability.
+    """
+
+    kind: str
+    sentence: str
+    value: float
+    likely: float
+
+
+@dataclass(frozen=True, slots=True)
+class Judged:
+    """A line judged: what was claimed, what follows from the claim's own values, what is right.
+
+    ``follows`` is the interval that follows from the values the claim itself uses; ``right`` is
+    the recorded value; ``causes`` are the ids of origins that a carried line rests on.
+    """
+
+    id: str
+    verdict: Verdict
+    claim: Claim | None
+    follows: Interval
+    right: float
+    note: str = ""
+    slips: tuple[Slip, ...] = ()
+    causes: tuple[str, ...] = field(default=())
