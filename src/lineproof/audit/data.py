@@ -119,3 +119,51 @@ class Judged:
     note: str = ""
     slips: tuple[Slip, ...] = ()
     causes: tuple[str, ...] = field(default=())
+
+
+class Severity(StrEnum):
+    """How much a finding matters, the gravest first."""
+
+    CRITICAL = "critical"
+    MAJOR = "major"
+    MINOR = "minor"
+    OBSERVATION = "observation"
+
+
+@dataclass(frozen=True, slots=True)
+class Effect:
+    """What a wrong line does to a check downstream: utilisation and truth as claimed and right."""
+
+    check: str
+    claimed: float | None
+    right: float | None
+    holds_as_claimed: bool
+    holds: bool
+    sentence: str
+
+
+@dataclass(frozen=True, slots=True)
+class Finding:
+    """One thing that a checker would write down.
+
+    ``source`` says which search found it (``claims``, ``drawing``, ``missing``, ``traps``,
+    ``notebook``, ``verify``); ``ids`` are the lines it concerns, ``advice`` what to do.
+    """
+
+    source: str
+    severity: Severity
+    what: str
+    ids: tuple[str, ...] = ()
+    clause: str = ""
+    advice: str = ""
+    effects: tuple[Effect, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Audit:
+    """All that an audit found about one calculation; ``findings`` the gravest first."""
+
+    calc: str
+    digest: str
+    judged: tuple[Judged, ...] = ()
+    findings: tuple[Finding, ...] = ()
