@@ -1,0 +1,175 @@
+"""What matters: the checks that other values of some lines would change, the gravest first."""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+import lineproof.beams  # noqa: F401 - registers the procedures of found values
+from lineproof.audit.data import Effect
+from lineproof.audit.graph import Graph, Node, Truth
+from lineproof.record.entry import DECISION
+
+UNSEEN = 0.0005
+"""A change of utilisation up to this is none: it would print as the same number."""
+_DIGITS = (2, 3, 4, 6)
+_PLACE = re.compile(r"\b(?:span|support)s? \d.*", re.IGNORECASE)
+
+
+@dataclass(frozen=True, slots=True)
+class Told:
+    """How the two states of a check are called, in the order in which the sentence tells them.
+
+    ``claimed_first`` tells the state with the changed values first; the state told last is the
+    one that matters, and the effects are sorted by it.
+    """
+
+    claimed: str
+    right: str
+    claimed_first: bool = True
+
+
+CLAIMED = Told("as claimed", "with the right value")
+"""Somebody's values against the record's: what is true once they are put right."""
+DRAWN = Told("as drawn", "in the calc", claimed_first=False)
+"""Values of a drawing against the calc's: what is true of the beam that will be built."""
+
+
+def effects_of(
+    graph: Graph, changed: Mapping[str, float], told: Told = CLAIMED
+) -> tuple[Effect, ...]:
+    """Return what changed values do to every check that rests on them.
+
+    ``changed`` holds values by id in internal units, as they were claimed (or drawn). An effect
+    keeps both numbers: ``claimed`` with these values, everything below them worked again, and
+    ``right`` as recorded. A check stands here if its truth differs or its utilisation by more
+    than :data:`UNSEEN`. Checks that turn to fail come first, then those that turn to hold, then
+    the rest by their change of utilisation.
+    """
+    worked, titles = graph.worked(changed), _titles(graph)
+    truths = worked.truths
+    found = [
+        _effect(
+            worked.truths.get(node.id), graph.truth(node.id), told, node.id, _name(node, titles)
+        )
+        for node in graph.checks()
+        if node.id in truths or node.id in worked.failed
+    ]
+    return tuple(sorted(filter(_matters, found), key=lambda effect: _order(effect, told)))
+
+
+def turned_decisions(graph: Graph, changed: Mapping[str, float]) -> tuple[str, ...]:
+    """Return the ids of decisions that changed values turn: the lines after them would differ.
+
+    The effects behind such a decision are those of the recorded branch.
+    """
+    truths = graph.worked(changed).truths
+    return tuple(
+        node.id
+        for node in graph
+        if node.kind == DECISION
+        and node.id in truths
+        and truths[node.id].holds != graph.truth(node.id).holds
+    )
+
+
+def place_of(title: str) -> str:
+    """Return the place that the title of a part names.
+
+    >>> place_of("Span 2: moment in the span"), place_of("Shear of span 1 at its left support")
+    ('span 2', 'span 1 at its left support')
+    >>> place_of("Cover for durability and fire")
+    'cover for durability and fire'
+    """
+    head = title.split(":", maxsplit=1)[0]
+    found = _PLACE.search(head)
+    place = found.group() if found else title
+    return place[:1].lower() + place[1:]
+
+
+def named_line(graph: Graph, entry_id: str) -> str:
+    """Name a line as a checker does: its title, its place and its number on the page."""
+    return _name(graph[entry_id], _titles(graph))
+
+
+def _titles(graph: Graph) -> dict[str, str]:
+    return {part["key"]: part["title"] for part in graph.record.parts}
+
+
+def _name(node: Node, titles: Mapping[str, str]) -> str:
+    label = f" ({node.label})" if node.label else ""
+    return f"{node.title}, {place_of(titles[node.part])}{label}"
+
+
+def _effect(claimed: Truth | None, right: Truth, told: Told, check: str, name: str) -> Effect:
+    """Put the two states of a check side by side; ``claimed`` is None if it cannot be worked."""
+    as_claimed = _State(told.claimed, None, holds=False)
+    if claimed is not None:
+        as_claimed = _State(told.claimed, claimed.utilisation, claimed.holds)
+    as_right = _State(told.right, right.utilisation, right.holds)
+    states = (as_claimed, as_right) if told.claimed_first else (as_right, as_claimed)
+    said = f"cannot be worked {told.claimed}" if claimed is None else _said(*states)
+    return Effect(
+        check,
+        as_claimed.utilisation,
+        as_right.utilisation,
+        as_claimed.holds,
+        as_right.holds,
+        f"{name}: {said}",
+    )
+
+
+@dataclass(frozen=True, slots=True)
+class _State:
+    """A check under one set of values."""
+
+    called: str
+    utilisation: float | None
+    holds: bool
+
+
+def _said(first: _State, last: _State) -> str:
+    turn = {
+        (True, False): "no longer holds",
+        (False, True): "holds after all",
+        (True, True): "still holds",
+        (False, False): "does not hold either way",
+    }[first.holds, last.holds]
+    before, after = _digits(first.utilisation, last.utilisation)
+    return f"utilisation from {before} {first.called} to {after} {last.called}, {turn}"
+
+
+def _digits(first: float | None, last: float | None) -> tuple[str, str]:
+    """Print two utilisations with so many decimals that they differ and 1.004 is not 1.00."""
+    texts = ("", "")
+    for count in _DIGITS:
+        texts = (_printed(first, count), _printed(last, count))
+        hidden = any(
+            value is not None and float(text) == 1 != value
+            for text, value in zip(texts, (first, last), strict=True)
+        )
+        if texts[0] != texts[1] and not hidden:
+            break
+    return texts
+
+
+def _printed(utilisation: float | None, decimals: int) -> str:
+    return "none" if utilisation is None else f"{utilisation:.{decimals}f}"
+
+
+def _matters(effect: Effect) -> bool:
+    return effect.holds != effect.holds_as_claimed or _change(effect) > UNSEEN
+
+
+def _change(effect: Effect) -> float:
+    if effect.claimed is None or effect.right is None:
+        return 0.0 if effect.claimed == effect.right else math.inf
+    return abs(effect.right - effect.claimed)
+
+
+def _order(effect: Effect, told: Told) -> tuple[int, float]:
+    last = effect.holds if told.claimed_first else effect.holds_as_claimed
+    turns = effect.holds != effect.holds_as_claimed
+    return (0 if turns and not last else 1 if turns else 2), -_change(effect)
