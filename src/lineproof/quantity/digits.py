@@ -7,24 +7,42 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass
 from decimal import ROUND_HALF_UP, Context, Decimal
+from functools import cache
+from typing import NamedTuple
 
-START_DIGITS = 3
+from lineproof.quantity.quick_digits import (
+    FEW_DIGITS,
+    PLAIN_BELOW,
+    PLAIN_FROM,
+    quick_text,
+    quick_value,
+)
+
+START_DIGITS = FEW_DIGITS
 MOST_DIGITS = 6
 ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
-PLAIN_FROM, PLAIN_BELOW = -4, 6
-"""Powers of ten between which numbers are written out."""
 _EXACT = Context(prec=400, rounding=ROUND_HALF_UP)
+
+
+@cache
+def _context(digits: int) -> Context:
+    return Context(prec=digits, rounding=ROUND_HALF_UP)
 
 
 def significant(value: float | Decimal, digits: int) -> Decimal:
     """Return ``value`` rounded to ``digits`` significant digits, or to ``-digits`` decimals."""
     if digits <= 0:
         return Decimal(value).quantize(Decimal(1).scaleb(digits), context=_EXACT)
-    return Context(prec=digits, rounding=ROUND_HALF_UP).plus(Decimal(value))
+    return _context(digits).plus(Decimal(value))
+
+
+def rounded_value(value: float, digits: int) -> float:
+    """Return :func:`significant` as a float: what a reader of the printed number reckons with."""
+    quick = quick_value(value, digits)
+    return float(significant(value, digits)) if quick is None else quick
 
 
 def number_text(number: Decimal) -> str:
@@ -61,6 +79,9 @@ def rounded_text(value: float | Decimal, digits: int) -> str:
     >>> rounded_text(0.0004, -2), rounded_text(0.0, 3)
     ('0.00', '0')
     """
+    quick = quick_text(value, digits) if isinstance(value, float) else None
+    if quick is not None:
+        return quick
     number = significant(value, digits)
     if digits <= 0:
         return f"{number or abs(number):f}"
@@ -93,8 +114,7 @@ def last_unit(value: float, digits: int) -> float:
     return 10.0 ** (math.floor(math.log10(abs(value))) - digits + 1) if value else 0.0
 
 
-@dataclass(frozen=True, slots=True)
-class Argument:
+class Argument(NamedTuple):
     """An argument of a printed line: its value, and either its exact print or its least digits."""
 
     value: float
@@ -102,8 +122,7 @@ class Argument:
     exact: float | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class Chosen:
+class Chosen(NamedTuple):
     """Significant digits per argument and for the result (zero or less: decimals, negated)."""
 
     args: tuple[int, ...]
@@ -130,10 +149,13 @@ def choose_digits(
     ``wanted`` asks for more digits than the start, as far as they can be had.
     """
     first = max(start_digits(result, unit), needed, min(wanted, MOST_DIGITS))
+    digits = [a.digits for a in args]
+    plain = decimals is None or needed
+    if plain and _agrees(function, _printed(args, digits), result, first):
+        return Chosen(tuple(digits), first)
     fewer = [first] if needed else [*range(first, 0, -1), *range(-MOST_DECIMALS, 1)]
     if decimals is not None and not needed:
         fewer = [*range(-decimals, 1)]
-    digits = [a.digits for a in args]
     for limit, result_digits in [*((MOST_DIGITS, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
         while not _agrees(function, _printed(args, digits), result, result_digits):
             longest = _most_moving(function, args, digits, result, limit)
@@ -147,7 +169,7 @@ def choose_digits(
 
 def _printed(args: Sequence[Argument], digits: Sequence[int]) -> list[float]:
     return [
-        a.exact if a.exact is not None else float(significant(a.value, n))
+        a.exact if a.exact is not None else rounded_value(a.value, n)
         for a, n in zip(args, digits, strict=True)
     ]
 
@@ -155,7 +177,7 @@ def _printed(args: Sequence[Argument], digits: Sequence[int]) -> list[float]:
 def _agrees(
     function: Callable[..., float], printed: Sequence[float], result: float, digits: int
 ) -> bool:
-    shown = float(significant(result, digits))
+    shown = rounded_value(result, digits)
     missed = abs(_call(function, printed) - shown)
     return missed <= last_unit(result, digits) / 2 * (1 + 1e-9)
 
@@ -178,7 +200,7 @@ def _most_moving(
     exact = [a.value for a in args]
     moves = []
     for i, (argument, n) in enumerate(zip(args, digits, strict=True)):
-        rounded = float(significant(argument.value, n))
+        rounded = rounded_value(argument.value, n)
         if argument.exact is None and n < limit and rounded != argument.value:
             alone = [*exact[:i], rounded, *exact[i + 1 :]]
             moves.append((abs(_call(function, alone) - result), -i))

@@ -202,6 +202,17 @@ def factor(unit: str, into: str) -> Decimal:
 
 
 @cache
+def power_of_ten(unit: str, into: str) -> int | None:
+    """Return the power of ten by which two units differ, or None where it is another number.
+
+    >>> power_of_ten("kN.m", "N.mm"), power_of_ten("ft", "mm")
+    (6, None)
+    """
+    digits = factor(unit, into).normalize().as_tuple()
+    return int(digits.exponent) if digits.digits == (1,) else None
+
+
+@cache
 def internal_factor(unit: str) -> float:
     """Return the float that turns a number in ``unit`` into the internal unit of its kind."""
     return float(factor(unit, UNITS[unit].internal))

@@ -28,8 +28,6 @@ from lineproof.record.printing import Printer, utilisation
 SCHEMA = 1
 EARLIER_EDITION = "an earlier edition"
 """Stands in the basis of a rule whose text in the edition named is not known here."""
-MOST_PASSES = 8
-"""Passes of printing: the later ones show each value as long as other lines need it."""
 _UNNUMBERED = (FIGURE, NOTE, TABLE)
 
 
@@ -128,36 +126,11 @@ class PartByPart:
 
 
 def _settled(parts: Sequence[Part], digits: Mapping[int, int] | None = None) -> Printer:
-    """Print until no line asks for more digits of a value; return the printer of the last pass."""
+    """Return the strings of all entries, printed until no line asks for more digits of a value."""
     entries = [entry for part in parts for entry in part.entries.values()]
     for entry in entries:
         _check_kinds(entry)
-    printer = Printer(digits=digits)
-    for _ in range(MOST_PASSES - 1):
-        for entry in entries:
-            _print(entry, printer)
-        settled = printer.settled()
-        printer = printer.following()
-        if settled:
-            break
-    return printer
-
-
-def _print(entry: Entry, printer: Printer) -> None:
-    """Print all numbers of an entry, in the order in which its row holds them."""
-    if entry.kind in VALUES:
-        printer.printed(entry)
-        if entry.kind == FOUND:
-            _closing(entry, printer)
-    elif entry.kind in CRITERIA:
-        printer.criterion(entry, _ratio_of(entry))
-
-
-def _closing(entry: Entry, printer: Printer) -> dict[str, Any]:
-    extra, test = entry.extra or {}, entry.source.closing
-    sides: tuple[float, float] = extra["closing_sides"]
-    holds = test.holds(*sides)
-    return printer.comparison(entry, test, extra["closing_args"], sides, holds=holds)
+    return Printer(entries, digits)
 
 
 def _ratio_of(entry: Entry) -> float | None:
@@ -202,7 +175,7 @@ class _Builder:
 
     def _value(self, entry: Entry) -> dict[str, Any]:
         source = entry.source
-        printed = {"printed": self._printer.printed(entry)}
+        printed = {"printed": self._printer.value(entry)}
         if entry.kind == GIVEN:
             return {"typed": source.typed.text, "source": source.origin} | printed
         if entry.kind == LOOKUP:
@@ -236,7 +209,7 @@ class _Builder:
                 "right": sides[1] / internal_factor(test.unit),
                 "unit": test.unit,
                 "conclusion": test.yes,
-                "printed": _closing(entry, self._printer),
+                "printed": self._printer.comparison(entry),
             }
             | ({} if test.system == "N-mm" else {"system": test.system}),
         }

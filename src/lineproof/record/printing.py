@@ -3,164 +3,223 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass, replace
+from collections.abc import Mapping, Sequence
 from decimal import Decimal
 from typing import Any
 
-from lineproof.formula import Criterion, Formula, Name, Number, System
+from lineproof.formula import Criterion, Formula, Name, Number
 from lineproof.quantity.digits import (
-    ALL_DIGITS,
     MOST_DECIMALS,
     MOST_DIGITS,
-    PLAIN_BELOW,
     START_DIGITS,
     Argument,
     Chosen,
     choose_digits,
     digits_in,
-    number_text,
-    rounded_text,
-    significant,
     start_digits,
 )
-from lineproof.quantity.units import NOT_METRIC, UNITS, factor, internal_factor, system_unit
-from lineproof.record.entry import FOUND, GIVEN, LINE, LOOKUP, Entry
+from lineproof.quantity.units import (
+    NOT_METRIC,
+    UNITS,
+    factor,
+    internal_factor,
+    power_of_ten,
+    system_unit,
+)
+from lineproof.record.entry import CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES, Entry
+from lineproof.record.standing import Standing, exact_decimal
 from lineproof.record.truth import in_unit, true_substitution, truthful
+from lineproof.record.utilisation import printed_ratio, ratio, utilisation
 
 __all__ = ["Printer", "exact_decimal", "in_unit", "ratio", "utilisation"]
 
-_LONGEST_TYPED = 15
+MOST_PASSES = 8
+"""Passes of printing: the later ones show each value as long as other lines need it."""
 _RESIDUAL = 0.01
 """Share of the other side below which a side is but the residual of nearly equal numbers."""
-_NOTHING = 0.001
-"""Utilisation below which 0.00 is printed."""
+_LEAST_FOUND = 4
+"""Digits that a found value shows at least."""
 
 
-def exact_decimal(entry: Entry) -> Decimal | None:
-    """Return the exact decimal of a typed or looked-up value [internal unit].
+class _Print:
+    """One print: of a value, or of the two sides of a comparison; as the last pass left it."""
 
-    None for a computed value, and for one converted from a US unit into too many digits.
-    """
-    if entry.kind not in (GIVEN, LOOKUP):
-        return None
-    typed = entry.source.typed
-    exact: Decimal = typed.exact
-    longest = MOST_DIGITS if typed.unit in NOT_METRIC else _LONGEST_TYPED
-    short = exact.normalize()
-    return short if len(short.as_tuple().digits) <= longest else None
-
-
-@dataclass(frozen=True, slots=True)
-class _Kept:
-    """What was printed of an entry, the digits it rests on, and those that it asks for."""
-
-    rests_on: tuple[int | None, ...]
-    printed: dict[str, Any]
-    digits: int | None
-    uses: tuple[tuple[Entry, int], ...]
-
-
-class Printer:
-    """Prints entries one after the other, remembering the digits each shows at its own line.
-
-    A later line may need more digits of a value than its own line shows. ``wanted`` holds what a
-    pass before this one found, by entry, so that a value reads the same wherever it stands;
-    ``used`` holds what this pass finds; ``digits`` those that entries printed before have shown.
-    What nothing has changed for since the pass before is taken from there.
-    """
+    __slots__ = ("ahead", "args", "due", "entry", "sides", "strings", "test", "uses")
 
     def __init__(
         self,
-        wanted: Mapping[int, int] | None = None,
-        digits: Mapping[int, int] | None = None,
-        kept: dict[tuple[int, str], _Kept] | None = None,
+        entry: Entry,
+        args: tuple[Entry, ...],
+        test: Criterion | None = None,
+        sides: tuple[float, float] = (0.0, 0.0),
     ) -> None:
-        self.digits: dict[int, int] = dict(digits or {})
-        self._begun = dict(self.digits)
-        self._wanted = dict(wanted or {})
-        self._kept = {} if kept is None else kept
-        self._uses: list[tuple[Entry, int]] = []
-        self.used: dict[int, int] = {}
+        self.entry, self.args, self.test, self.sides = entry, args, test, sides
+        self.ahead: frozenset[int] = frozenset()
+        self.strings: dict[str, Any] = {}
+        self.uses: tuple[tuple[int, int], ...] = ()
+        self.due = True
 
-    def settled(self) -> bool:
-        """Tell whether this pass asked for nothing that it had not been told."""
-        return self._needed() == self._wanted
 
-    def following(self) -> Printer:
-        """Return the printer of another pass, told what this one asked for."""
-        return Printer(self._needed(), self._begun, self._kept)
+class Printer:
+    """Prints entries in their order, in passes, remembering the digits each shows at its own line.
 
-    def _needed(self) -> dict[int, int]:
-        return {key: max(n, self._wanted.get(key, 0)) for key, n in self.used.items()}
+    A later line may need more digits of a value than its own line shows. What a pass finds is
+    told to the one after it, so that a value reads the same wherever it stands; a pass prints
+    again only what something has changed for. ``shown`` are the digits that values printed
+    before have shown, by the id of the object; ``digits`` those of these as well.
+    """
 
-    def _note_use(self, entry: Entry, digits: int) -> None:
-        if entry.kind in (LINE, FOUND, GIVEN):
-            self._uses.append((entry, digits))
+    def __init__(self, entries: Sequence[Entry], shown: Mapping[int, int] | None = None) -> None:
+        self._begun = dict(shown or {})
+        self.digits = dict(self._begun)
+        self._wanted: dict[int, int] = {}
+        self._standing: dict[int, Standing] = {}
+        self._ahead: frozenset[int] = frozenset()
+        self._values: dict[int, _Print] = {}
+        self._comparisons: dict[int, _Print] = {}
+        self._prints = self._laid_out(entries)
+        self._users: dict[int, list[_Print]] = {}
+        for one in self._prints:
+            for key in {id(arg) for arg in one.args}:
+                self._users.setdefault(key, []).append(one)
+        self._settle()
 
-    def _once(
-        self, entry: Entry, what: str, args: Sequence[Entry], make: Callable[[], dict[str, Any]]
-    ) -> dict[str, Any]:
-        """Print something of an entry, unless it was printed before resting on the same digits."""
-        own = id(entry)
-        rests_on = (self._wanted.get(own, 0), *(self.digits.get(id(a)) for a in args))
-        kept = self._kept.get((own, what))
-        if kept is None or kept.rests_on != rests_on:
-            self._uses = []
-            printed = make()
-            kept = _Kept(rests_on, printed, self.digits.get(own), tuple(self._uses))
-            self._kept[own, what] = kept
-        if kept.digits is not None:
-            self.digits[own] = kept.digits
-        for used, digits in kept.uses:
-            self.used[id(used)] = max(digits, self.used.get(id(used), 0))
-        return kept.printed
-
-    def printed(self, entry: Entry) -> dict[str, Any]:
+    def value(self, entry: Entry) -> dict[str, Any]:
         """Return the printed strings of a given, lookup, line or found value."""
-        return self._once(entry, "value", entry.args, lambda: self._value(entry))
+        return self._values[id(entry)].strings
+
+    def comparison(self, entry: Entry) -> dict[str, Any]:
+        """Return both sides of the comparison of a decision, a check or a found value."""
+        return self._comparisons[id(entry)].strings
 
     def criterion(self, entry: Entry, utilisation: float | None) -> dict[str, Any]:
         """Return the printed strings of a decision or a check."""
-        holds = bool(entry)
-        made = self.comparison(entry, entry.source, entry.args, entry.value, holds=holds)
-        ratio = {} if utilisation is None else {"utilisation": _ratio(utilisation, holds=holds)}
-        return made | ratio
+        made = self.comparison(entry)
+        if utilisation is None:
+            return made
+        return made | {"utilisation": printed_ratio(utilisation, holds=bool(entry))}
 
-    def comparison(
-        self,
-        entry: Entry,
-        test: Criterion,
-        args: Sequence[Entry],
-        sides: tuple[float, float],
-        *,
-        holds: bool,
-    ) -> dict[str, Any]:
-        """Return both sides of a comparison of an entry, as :meth:`_compared` prints them."""
-        return self._once(
-            entry, "comparison", args, lambda: self._compared(test, args, sides, holds=holds)
+    # -- passes ------------------------------------------------------------------------------
+
+    def _laid_out(self, entries: Sequence[Entry]) -> list[_Print]:
+        """Return what is printed, in order: each entry, and after a found value its closing."""
+        made: list[_Print] = []
+        for entry in entries:
+            if entry.kind in VALUES:
+                self._values[id(entry)] = _Print(entry, entry.args)
+                made.append(self._values[id(entry)])
+            if entry.kind in CRITERIA:
+                one = _Print(entry, entry.args, entry.source, entry.value)
+                made.append(one)
+                self._comparisons[id(entry)] = one
+            elif entry.kind == FOUND:
+                extra = entry.extra or {}
+                args, sides = extra["closing_args"], extra["closing_sides"]
+                one = _Print(entry, args, entry.source.closing, sides)
+                made.append(one)
+                self._comparisons[id(entry)] = one
+        self._mark_ahead(made)
+        return made
+
+    def _mark_ahead(self, prints: Sequence[_Print]) -> None:
+        """Tell each print which of its arguments are printed after it: not yet, in any pass."""
+        printed: set[int] = set()
+        for one in prints:
+            printed.add(id(one.entry))
+            one.ahead = frozenset(
+                id(arg) for arg in one.args if id(arg) in self._values and id(arg) not in printed
+            )
+
+    def _settle(self) -> None:
+        """Print until no line asks for more digits of a value."""
+        for _ in range(MOST_PASSES - 1):
+            asked = self._pass()
+            if not self._tell(asked):
+                break
+        self._pass()
+
+    def _pass(self) -> set[int]:
+        """Print what is due, in order; return the values of which it may ask for other digits."""
+        asked: set[int] = set()
+        for one in self._prints:
+            if not one.due:
+                continue
+            own, before = id(one.entry), one.uses
+            shown = self.digits.get(own)
+            self._print(one)
+            one.due = False
+            if one.uses != before:
+                asked.update(key for key, _ in one.uses)
+            if self.digits.get(own) != shown:
+                for user in self._users.get(own, ()):
+                    user.due = user.due or own not in user.ahead
+        return asked
+
+    def _tell(self, asked: set[int]) -> bool:
+        """Take over the digits asked for; tell whether any value is to show more than before."""
+        more = False
+        for key in asked:
+            uses = [n for user in self._users[key] for used, n in user.uses if used == key]
+            before = self._wanted.get(key)
+            needed = max(uses) if before is None else max(before, *uses)
+            if needed == before:
+                continue
+            self._wanted[key] = needed
+            more = True
+            one = self._values.get(key)
+            if one is not None and _starts(one.entry, needed) != _starts(one.entry, before):
+                one.due = True
+        return more
+
+    def _print(self, one: _Print) -> None:
+        self._ahead = one.ahead
+        if one.test is not None:
+            one.strings, shown = self._compared(one, one.test)
+        else:
+            one.strings, shown = self._value(one.entry)
+        one.uses = tuple(
+            (id(arg), digits)
+            for arg, digits in zip(one.args, shown, strict=False)
+            if arg.kind != LOOKUP
         )
 
-    def _value(self, entry: Entry) -> dict[str, Any]:
+    # -- one print ---------------------------------------------------------------------------
+
+    def _stands(self, entry: Entry) -> Standing:
+        found = self._standing.get(id(entry))
+        if found is None:
+            found = self._standing[id(entry)] = Standing(entry)
+        return found
+
+    def _shown(self, entry: Entry) -> int:
+        """Return the digits that an argument has shown so far in this pass."""
+        key = id(entry)
+        digits = self._begun if key in self._ahead else self.digits
+        return digits.get(key, START_DIGITS)
+
+    def _arguments(self, args: Sequence[Entry]) -> list[Argument]:
+        return [self._stands(arg).argument(self._shown(arg)) for arg in args]
+
+    def _value(self, entry: Entry) -> tuple[dict[str, Any], Sequence[int]]:
+        """Return the strings of a value, and the digits that they ask of its arguments."""
         if entry.kind == GIVEN:
             made = _given(entry, self._wanted.get(id(entry), 0))
             self.digits[id(entry)] = digits_in(made["result"])
-        elif entry.kind == LOOKUP:
-            made = {"result": entry.source.typed.number, "unit": entry.source.unit}
-        elif entry.kind == FOUND:
-            made = self._found(entry)
-        else:
-            made = self._line(entry)
-        return made
+            return made, ()
+        if entry.kind == LOOKUP:
+            return {"result": entry.source.typed.number, "unit": entry.source.unit}, ()
+        if entry.kind == FOUND:
+            return self._found(entry), ()
+        return self._line(entry)
 
-    def _compared(
-        self, test: Criterion, args: Sequence[Entry], sides: tuple[float, float], *, holds: bool
-    ) -> dict[str, Any]:
+    def _compared(self, one: _Print, test: Criterion) -> tuple[dict[str, Any], Sequence[int]]:
         """Return both sides printed so that the printed comparison has the recorded truth.
 
         The same goes for the substitution: both formulas of the printed arguments.
         """
-        arguments = [self._argument(a) for a in args]
+        args, sides = one.args, one.sides
+        holds = test.holds(*sides)
+        arguments = self._arguments(args)
         chosen = [
             self._side(place, test, args, arguments, value, other=other)
             for place, (value, other) in enumerate(zip(sides, reversed(sides), strict=True))
@@ -173,13 +232,11 @@ class Printer:
         shown = [max(pair) for pair in zip(*(c.args for c in chosen), strict=True)]
         shown = true_substitution(test, arguments, shown, holds=holds)
         left, right = (in_unit(v, test.unit, n) for v, n in zip(sides, needed, strict=True))
-        for arg, digits in zip(args, shown, strict=True):
-            self._note_use(arg, digits)
         texts = {
-            name: _argument_text(arg, argument, n, test.system)
-            for name, arg, argument, n in zip(test.names, args, arguments, shown, strict=True)
+            name: self._stands(arg).text(n, test.system)
+            for name, arg, n in zip(test.names, args, shown, strict=True)
         }
-        return {"args": texts, "left": left, "right": right, "unit": test.unit}
+        return {"args": texts, "left": left, "right": right, "unit": test.unit}, shown
 
     def _side(
         self,
@@ -195,8 +252,8 @@ class Printer:
         tree = (test.left, test.right)[place]
         if isinstance(tree, Name):
             at = test.names.index(tree.id)
-            exact = exact_decimal(args[at])
-            own = self.digits.get(id(args[at]), START_DIGITS)
+            exact = self._stands(args[at]).exact
+            own = self._shown(args[at])
             digits = needed or (_shown_digits(exact, args[at], test.unit) if exact else own)
             shown = [a.digits for a in arguments]
             shown[at] = max(shown[at], digits)
@@ -211,57 +268,55 @@ class Printer:
             decimals=_residual_decimals(value / scale, other / scale),
         )  # fmt: skip
 
-    def _argument(self, entry: Entry) -> Argument:
-        exact = exact_decimal(entry)
-        own = self.digits.get(id(entry), START_DIGITS)
-        start = max(START_DIGITS, own, start_digits(entry.value, entry.unit))
-        return Argument(
-            entry.value, min(start, MOST_DIGITS), None if exact is None else float(exact)
-        )
-
-    def _line(self, entry: Entry) -> dict[str, Any]:
+    def _line(self, entry: Entry) -> tuple[dict[str, Any], Sequence[int]]:
         made: Formula = entry.source
-        unit, target = entry.unit, system_unit(entry.unit, made.system)
-        arguments = [self._argument(a) for a in entry.args]
+        unit = entry.unit
+        target = system_unit(unit, made.system)
+        arguments = self._arguments(entry.args)
         wanted = self._wanted.get(id(entry), 0)
         chosen = _choose(made, arguments, entry.value, unit, wanted)
         coherent = chosen.result
-        if not _by_powers_of_ten(unit, target):
+        if power_of_ten(unit, target) is None:
             # The result in two unlike units: both must follow from the printed arguments.
             arguments = _longer(arguments, chosen)
             between = _choose(made, arguments, entry.value, target)
             chosen = _choose(made, _longer(arguments, between), entry.value, unit)
             coherent = between.result
         texts = {
-            name: _argument_text(arg, argument, digits, made.system)
-            for name, arg, argument, digits in zip(
-                made.names, entry.args, arguments, chosen.args, strict=True
-            )
+            name: self._stands(arg).text(digits, made.system)
+            for name, arg, digits in zip(made.names, entry.args, chosen.args, strict=True)
         }
-        for arg, digits in zip(entry.args, chosen.args, strict=True):
-            self._note_use(arg, digits)
         self.digits[id(entry)] = chosen.result
         return {
             "args": texts,
             "result": in_unit(entry.value, unit, chosen.result),
             "unit": unit,
             "coherent": _coherent(entry.value, unit, target, coherent),
-        }
+        }, chosen.args
 
     def _found(self, entry: Entry) -> dict[str, Any]:
-        least = max(4, start_digits(entry.value, entry.unit))
+        least = max(_LEAST_FOUND, start_digits(entry.value, entry.unit))
         digits = max(least, self._wanted.get(id(entry), 0))
         self.digits[id(entry)] = digits
+        arguments = self._arguments(entry.args)
         texts = {
-            name: _argument_text(arg, argument, argument.digits, "N-mm")
-            for name, arg in zip(entry.source.names, entry.args, strict=True)
-            for argument in [self._argument(arg)]
+            name: self._stands(arg).text(argument.digits, "N-mm")
+            for name, arg, argument in zip(entry.source.names, entry.args, arguments, strict=True)
         }
         return {
             "args": texts,
             "result": in_unit(entry.value, entry.unit, digits),
             "unit": entry.unit,
         }
+
+
+def _starts(entry: Entry, wanted: int | None) -> int:
+    """Return the digits that a value starts with at its own line when others want so many."""
+    wanted = wanted or 0
+    if entry.kind == LINE:
+        first = start_digits(entry.value / internal_factor(entry.unit), entry.unit)
+        return max(first, min(wanted, MOST_DIGITS))
+    return max(_LEAST_FOUND, wanted) if entry.kind == FOUND else wanted
 
 
 def _residual_decimals(value: float, other: float) -> int | None:
@@ -294,11 +349,7 @@ def _choose(
 
 
 def _longer(arguments: Sequence[Argument], chosen: Chosen) -> list[Argument]:
-    return [replace(a, digits=n) for a, n in zip(arguments, chosen.args, strict=True)]
-
-
-def _by_powers_of_ten(unit: str, target: str) -> bool:
-    return factor(unit, target).normalize().as_tuple().digits == (1,)
+    return [a._replace(digits=n) for a, n in zip(arguments, chosen.args, strict=True)]
 
 
 def _given(entry: Entry, wanted: int) -> dict[str, Any]:
@@ -316,52 +367,7 @@ def _given(entry: Entry, wanted: int) -> dict[str, Any]:
     }
 
 
-def _argument_text(entry: Entry, argument: Argument, digits: int, system: System) -> str:
-    unit = entry.unit
-    target = system_unit(unit, system)
-    shift = factor(UNITS[unit].internal, target)
-    exact = exact_decimal(entry)
-    if exact is not None:
-        return number_text(_whole((exact * shift).normalize()))
-    rounded = significant(argument.value, digits) * shift
-    return rounded_text(rounded, digits)
-
-
-def _whole(exact: Decimal) -> Decimal:
-    """Give an exact number its zeros back: 500e6, not 5e8."""
-    power = 0 if exact.adjusted() < PLAIN_BELOW else exact.adjusted() // 3 * 3
-    wide = int(exact.as_tuple().exponent) > power
-    return exact.quantize(Decimal(1).scaleb(power)) if wide else exact
-
-
 def _coherent(value: float, unit: str, target: str, digits: int) -> dict[str, str] | None:
     if target == unit or factor(unit, target) == 1 or digits <= 0:
         return None
     return {"result": in_unit(value, target, digits), "unit": target}
-
-
-def _ratio(utilisation: float, *, holds: bool) -> str:
-    if 0 < utilisation < _NOTHING and holds:
-        return "0.00"
-    for digits in range(START_DIGITS, ALL_DIGITS + 1):
-        text = rounded_text(utilisation, digits)
-        if (float(text) <= 1) == holds:
-            return text
-    # Demand and resistance are equal, and the check asks for less.
-    return rounded_text(utilisation, START_DIGITS)
-
-
-def utilisation(entry: Entry) -> float | None:
-    """Return demand over resistance of a check, if demand >= 0 and resistance > 0."""
-    left, right = entry.value
-    return ratio(entry.source.sign, left, right)
-
-
-def ratio(sign: str, left: float, right: float) -> float | None:
-    """Return the utilisation of a comparison, or None where it would say nothing."""
-    if sign in (">=", ">"):
-        left, right = right, left
-    if left < 0 or right <= 0:
-        return None
-    made = left / right
-    return made if math.isfinite(made) else None

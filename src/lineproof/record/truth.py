@@ -7,12 +7,17 @@ from decimal import Decimal
 
 from lineproof.formula import Criterion
 from lineproof.formula.compiled import COMPARE, PLAIN_COMPARE
-from lineproof.quantity.digits import ALL_DIGITS, Argument, rounded_text, significant
-from lineproof.quantity.units import UNITS, factor
+from lineproof.quantity.digits import ALL_DIGITS, Argument, rounded_text, rounded_value
+from lineproof.quantity.quick_digits import quick_text
+from lineproof.quantity.units import UNITS, factor, power_of_ten
 
 
 def in_unit(value: float, unit: str, digits: int) -> str:
     """Return an internal value printed in a unit to so many significant digits."""
+    power = power_of_ten(unit, UNITS[unit].internal)
+    quick = None if power is None else quick_text(value, digits, -power)
+    if quick is not None:
+        return quick
     # Divided as decimals: two floats that differ by their last bit must not become one.
     return rounded_text(Decimal(value) / factor(unit, UNITS[unit].internal), digits)
 
@@ -39,7 +44,7 @@ def true_substitution(
     """Lengthen arguments until both sides, computed from them, compare as recorded."""
     while max(digits, default=ALL_DIGITS) < ALL_DIGITS:
         numbers = [
-            a.exact if a.exact is not None else float(significant(a.value, n))
+            a.exact if a.exact is not None else rounded_value(a.value, n)
             for a, n in zip(arguments, digits, strict=True)
         ]
         try:

@@ -1,0 +1,80 @@
+"""What stands of a value however often it is printed: its exact decimal, its least digits."""
+
+from __future__ import annotations
+
+from decimal import Decimal
+
+from lineproof.formula import System
+from lineproof.quantity.digits import (
+    MOST_DIGITS,
+    START_DIGITS,
+    Argument,
+    number_text,
+    rounded_text,
+    significant,
+    start_digits,
+)
+from lineproof.quantity.quick_digits import PLAIN_BELOW, quick_text
+from lineproof.quantity.units import NOT_METRIC, UNITS, factor, power_of_ten, system_unit
+from lineproof.record.entry import GIVEN, LOOKUP, Entry
+
+_LONGEST_TYPED = 15
+
+
+def exact_decimal(entry: Entry) -> Decimal | None:
+    """Return the exact decimal of a typed or looked-up value [internal unit].
+
+    None for a computed value, and for one converted from a US unit into too many digits.
+    """
+    if entry.kind not in (GIVEN, LOOKUP):
+        return None
+    typed = entry.source.typed
+    exact: Decimal = typed.exact
+    longest = MOST_DIGITS if typed.unit in NOT_METRIC else _LONGEST_TYPED
+    short = exact.normalize()
+    return short if len(short.as_tuple().digits) <= longest else None
+
+
+class Standing:
+    """One value as an argument of other lines; each of its texts is made once."""
+
+    __slots__ = ("_least", "_number", "_texts", "entry", "exact", "unit")
+
+    def __init__(self, entry: Entry) -> None:
+        self.entry = entry
+        self.unit = entry.unit
+        self.exact = exact_decimal(entry)
+        self._number = None if self.exact is None else float(self.exact)
+        self._least = max(START_DIGITS, start_digits(entry.value, self.unit))
+        self._texts: dict[tuple[int, str], str] = {}
+
+    def argument(self, shown: int) -> Argument:
+        """Return the value as an argument that shows so many digits at its own line."""
+        return Argument(self.entry.value, min(max(shown, self._least), MOST_DIGITS), self._number)
+
+    def text(self, digits: int, system: System) -> str:
+        """Return the value printed to so many digits in the units of a substitution."""
+        known = self._texts.get((digits, system))
+        if known is None:
+            known = self._texts[digits, system] = self._made(digits, system)
+        return known
+
+    def _made(self, digits: int, system: System) -> str:
+        internal = UNITS[self.unit].internal
+        target = system_unit(self.unit, system)
+        if self.exact is None:
+            power = power_of_ten(internal, target)
+            quick = None if power is None else quick_text(self.entry.value, digits, power)
+            if quick is not None:
+                return quick
+            return rounded_text(
+                significant(self.entry.value, digits) * factor(internal, target), digits
+            )
+        return number_text(_whole((self.exact * factor(internal, target)).normalize()))
+
+
+def _whole(exact: Decimal) -> Decimal:
+    """Give an exact number its zeros back: 500e6, not 5e8."""
+    power = 0 if exact.adjusted() < PLAIN_BELOW else exact.adjusted() // 3 * 3
+    wide = int(exact.as_tuple().exponent) > power
+    return exact.quantize(Decimal(1).scaleb(power)) if wide else exact
