@@ -1,0 +1,82 @@
+"""Slips of units and coarse roundings: what a claimed number says beyond its digits."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass
+from decimal import Decimal
+
+from lineproof.audit.data import Claim, Interval, Slip
+from lineproof.quantity.units import UNITS, internal_factor, units_of_kind
+
+_MOST_POWER = 9
+_SHARP = 0.02
+"""Half width over value from which an interval is too wide to tell one factor from another."""
+_NEAR_ONE = 3.0
+"""Factors nearer to one, such as kip.ft for kN.m, are too easily met by chance."""
+_COARSE = (2, 5, 10, 20, 25, 50, 100)
+"""Steps in units of the last digit to which a practitioner rounds lengths and areas."""
+_COARSE_ELSEWHERE = (10,)
+_BUILT = ("length", "area")
+_FARTHEST = 0.025
+"""Part of a value by which a rounding may move it; beyond it is no rounding."""
+
+
+def unit_slip(claim: Claim, follows: Iterable[Interval]) -> Slip | None:
+    """Return the slip of units that reproduces a claim from what follows, if there is one."""
+    sharp = [i for i in follows if i.middle and i.half <= _SHARP * abs(i.middle)]
+    for factor, sentence in _factors(claim):
+        scaled = claim.stands_for.times(1 / factor)
+        for interval in sharp:
+            if scaled.meets(interval):
+                return Slip("unit", sentence, interval.middle * factor, 1.0)
+    return None
+
+
+def _factors(claim: Claim) -> Iterator[tuple[float, str]]:
+    """Give claimed over right value for every slip of unit, units of the list first."""
+    mine = internal_factor(claim.unit)
+    kind = UNITS[claim.unit].kind
+    for other in units_of_kind(kind):
+        factor = mine / internal_factor(other)
+        if not 1 / _NEAR_ONE < factor < _NEAR_ONE:
+            yield factor, f"reproduced exactly with {claim.unit} in place of {other}"
+    for power in range(1, _MOST_POWER + 1):
+        yield 10.0**power, f"reproduced exactly {10**power:,} times too large".replace(",", " ")
+        yield 10.0**-power, f"reproduced exactly {10**power:,} times too small".replace(",", " ")
+
+
+@dataclass(frozen=True, slots=True)
+class Rounded:
+    """A claim that is a rounding: of what, to which step in its unit, up or down."""
+
+    of: float
+    step: str
+    up: bool
+
+
+def coarse_rounding(claim: Claim, follows: Iterable[Interval]) -> Rounded | None:
+    """Return how a claim rounds what follows, coarser than its digits say; None if it does not.
+
+    One unit of the last digit in either direction counts for every number. Lengths and areas are
+    rounded to 5, 10, 25, 50 of it as built, other numbers to 10, which writes one digit less.
+    """
+    number = Decimal(claim.typed)
+    unit = _last_digit(claim)
+    coarse = _COARSE if UNITS[claim.unit].kind in _BUILT else _COARSE_ELSEWHERE
+    for interval in follows:
+        of = interval.middle
+        away = abs(claim.value - of)
+        if not of or away > _FARTHEST * abs(of):
+            continue
+        for count in (1, *coarse):
+            step = unit * count
+            if number % step == 0 and away < float(step) * internal_factor(claim.unit):
+                return Rounded(of, f"{step.normalize():f}", abs(claim.value) > abs(of))
+    return None
+
+
+def _last_digit(claim: Claim) -> Decimal:
+    """Return one unit of the last digit that a claim shows, in its unit."""
+    half = claim.stands_for.half / internal_factor(claim.unit)
+    return Decimal(1).scaleb(Decimal(2 * half * (1 + 1e-9)).adjusted())
