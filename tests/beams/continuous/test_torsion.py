@@ -2,15 +2,19 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import replace
 from typing import Any
 
 import numpy as np
 import pytest
+from hypothesis import HealthCheck, given, settings
+from hypothesis import strategies as st
 
 from lineproof.beams.analysis.model import Beam, Span, Support, UniformLoad
 from lineproof.beams.continuous.forces import Forces
+from lineproof.beams.continuous.shear_choice import Fitting, choose_layouts
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd, SpanNumbers, Stretch
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.shear_state import span_state
@@ -33,6 +37,7 @@ from .shear_models import (
     record,
     uniform,
 )
+from .shear_search import lightest, stands
 
 CLOSED = replace(BASIS, closed=True)
 
@@ -290,3 +295,28 @@ def test_forces_in_the_bars_by_torsion() -> None:
     assert (bottom >= own * (1 - 1e-9)).all()
     assert bottom.max() > 0
     assert top.max() > 0
+
+
+@settings(max_examples=6, deadline=None, derandomize=True, database=None,
+          suppress_health_check=list(HealthCheck))  # fmt: skip
+@given(torque=st.floats(500, 14e3), compatibility=st.booleans(),
+       method=st.sampled_from(["general", "simplified"]))  # fmt: skip
+def test_no_choice_of_closed_stirrups_is_lighter(
+    torque: float,
+    compatibility: bool,  # noqa: FBT001
+    method: Any,
+) -> None:
+    """Brute force over both spacings and both lengths of the end zones, as without torsion."""
+    case = edge_beam(torque, compatibility=compatibility)
+    basis = replace(CLOSED, method=method)
+    states = [span_state(basis, numbers, case.forces) for numbers in case.spans]
+    fits = [Fitting.of(state) for state in states]
+    try:
+        layouts = choose_layouts(states)
+    except UserError:
+        hopeless = any(state.hopeless.max() > 1 for state in states)
+        assert hopeless or lightest(fits)[0] == math.inf
+        return
+    mass = sum(x.number * fit.weight for x, fit in zip(layouts, fits, strict=True))
+    assert all(stands(fit, x) for fit, x in zip(fits, layouts, strict=True))
+    assert (round(mass, 3), sum(x.zones for x in layouts)) == lightest(fits)
