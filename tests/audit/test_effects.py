@@ -4,7 +4,14 @@ from __future__ import annotations
 
 import pytest
 
-from lineproof.audit.effects import CLAIMED, DRAWN, effects_of, place_of, turned_decisions
+from lineproof.audit.effects import (
+    CLAIMED,
+    DRAWN,
+    effects_of,
+    effects_of_right,
+    place_of,
+    turned_decisions,
+)
 from lineproof.audit.graph import Graph
 from lineproof.record import Record
 from lineproof.sheet import Sheet
@@ -66,6 +73,16 @@ def test_a_drawing_is_told_from_the_calc_to_what_is_drawn(graph: Graph) -> None:
     )
     assert strength.sentence.endswith(
         "utilisation from 1.06 in the calc to 1.51 as drawn, does not hold either way"
+    )
+
+
+def test_a_record_that_is_wrong_is_told_from_what_it_says(graph: Graph) -> None:
+    # The steel should be 1200 mm2: 180/204 = 0.882 put right, 180/170 = 1.059 as recorded.
+    strength, _ = effects_of_right(graph, {"sag-2/A_s": 1200.0})
+
+    assert (strength.holds_as_claimed, strength.holds) == (False, True)
+    assert strength.sentence.endswith(
+        "utilisation from 1.06 as recorded to 0.88 put right, holds after all"
     )
 
 

@@ -35,6 +35,8 @@ CLAIMED = Told("as claimed", "with the right value")
 """Somebody's values against the record's: what is true once they are put right."""
 DRAWN = Told("as drawn", "in the calc", claimed_first=False)
 """Values of a drawing against the calc's: what is true of the beam that will be built."""
+RECORDED = Told("as recorded", "put right")
+"""Values of the record against those that it should have."""
 
 
 def effects_of(
@@ -103,22 +105,30 @@ def _name(node: Node, titles: Mapping[str, str]) -> str:
     return f"{node.title}, {place_of(titles[node.part])}{label}"
 
 
-def _effect(claimed: Truth | None, right: Truth, told: Told, check: str, name: str) -> Effect:
-    """Put the two states of a check side by side; ``claimed`` is None if it cannot be worked."""
-    as_claimed = _State(told.claimed, None, holds=False)
-    if claimed is not None:
-        as_claimed = _State(told.claimed, claimed.utilisation, claimed.holds)
-    as_right = _State(told.right, right.utilisation, right.holds)
-    states = (as_claimed, as_right) if told.claimed_first else (as_right, as_claimed)
-    said = f"cannot be worked {told.claimed}" if claimed is None else _said(*states)
+def _effect(
+    claimed: Truth | None, right: Truth | None, told: Told, check: str, name: str
+) -> Effect:
+    """Put the two states of a check side by side; one that cannot be worked is None."""
+    states = _state(told.claimed, claimed), _state(told.right, right)
+    first, last = states if told.claimed_first else states[::-1]
+    lost = [
+        state.called for state, truth in zip(states, (claimed, right), strict=True) if not truth
+    ]
+    said = f"cannot be worked {lost[0]}" if lost else _said(first, last)
     return Effect(
         check,
-        as_claimed.utilisation,
-        as_right.utilisation,
-        as_claimed.holds,
-        as_right.holds,
+        states[0].utilisation,
+        states[1].utilisation,
+        states[0].holds,
+        states[1].holds,
         f"{name}: {said}",
     )
+
+
+def _state(called: str, truth: Truth | None) -> _State:
+    if truth is None:
+        return _State(called, None, holds=False)
+    return _State(called, truth.utilisation, truth.holds)
 
 
 @dataclass(frozen=True, slots=True)
