@@ -50,15 +50,28 @@ def effects_of(
     than :data:`UNSEEN`. Checks that turn to fail come first, then those that turn to hold, then
     the rest by their change of utilisation.
     """
+    return _effects(graph, changed, told, recorded_is_right=True)
+
+
+def effects_of_right(graph: Graph, right: Mapping[str, float]) -> tuple[Effect, ...]:
+    """Return the same where the record itself is wrong: ``right`` holds what its lines should be.
+
+    ``claimed`` of an effect is as recorded, ``right`` with these values put in.
+    """
+    return _effects(graph, right, RECORDED, recorded_is_right=False)
+
+
+def _effects(
+    graph: Graph, changed: Mapping[str, float], told: Told, *, recorded_is_right: bool
+) -> tuple[Effect, ...]:
     worked, titles = graph.worked(changed), _titles(graph)
-    truths = worked.truths
-    found = [
-        _effect(
-            worked.truths.get(node.id), graph.truth(node.id), told, node.id, _name(node, titles)
-        )
-        for node in graph.checks()
-        if node.id in truths or node.id in worked.failed
-    ]
+    found = []
+    for node in graph.checks():
+        if node.id not in worked.truths and node.id not in worked.failed:
+            continue
+        other, recorded = worked.truths.get(node.id), graph.truth(node.id)
+        claimed, right = (other, recorded) if recorded_is_right else (recorded, other)
+        found.append(_effect(claimed, right, told, node.id, _name(node, titles)))
     return tuple(sorted(filter(_matters, found), key=lambda effect: _order(effect, told)))
 
 
