@@ -1,0 +1,178 @@
+"""Workbooks (.xlsx) as rows of text: looked at as a zip first, then read without computing."""
+
+from __future__ import annotations
+
+import datetime as dt
+import io
+import re
+import zipfile
+import zlib
+from collections.abc import Iterator, Sequence
+from typing import TYPE_CHECKING
+
+from lineproof.errors import UserError
+
+if TYPE_CHECKING:
+    from openpyxl.cell.cell import Cell
+
+MOST_UNPACKED = 60_000_000
+MOST_RATIO = 200
+"""Times that a member may grow when unpacked; the XML of a plain table grows tenfold."""
+SMALL_MEMBER = 1_000_000
+"""A member up to this size may be packed as tightly as it likes."""
+MOST_MEMBERS = 500
+_COLUMNS_READ = 64
+_ROWS_READ = 20_002
+_OLD_FORMAT = b"\xd0\xcf\x11\xe0"
+_MERGED = re.compile(rb"<(?:\w+:)?mergeCell\s[^>]{0,80}?ref=[\"']([A-Z0-9:$]{1,30})[\"']")
+_SHEET = re.compile(r"xl/worksheets/[^/]+\.xml", re.IGNORECASE)
+_DECIMALS = re.compile(r"(?:#,##)?0(?:\.(0+))?\Z")
+_POWERS = re.compile(r"0(?:\.(0+))?E\+0+\Z")
+_GENERAL_DIGITS = 10
+_WIDTHS = {"id": 26, "label": 8, "place": 44, "symbol": 10, "title": 48, "claimed": 14, "where": 18}
+
+
+def read_workbook(content: bytes, name: str) -> Iterator[list[str]]:
+    """Give the rows of a workbook's first sheet as text, as the cells show them.
+
+    Raises :class:`UserError` for macros, formulas, merged cells, and for an archive that unpacks
+    into more than a table needs.
+    """
+    faults = _archive_faults(content, name)
+    if faults:
+        raise UserError(faults)
+    from openpyxl import load_workbook  # noqa: PLC0415 - 0.2 s, for workbooks alone
+
+    try:
+        book = load_workbook(io.BytesIO(content), read_only=True, data_only=False)
+        first = book.worksheets[0]
+        yield from _rows(first.iter_rows(max_row=_ROWS_READ, max_col=_COLUMNS_READ), name)
+    except UserError:
+        raise
+    except Exception:  # noqa: BLE001 - a broken workbook raises whatever its reader meets
+        raise UserError(
+            f"{name}: cannot be read as a workbook; open it in a spreadsheet and save it again"
+        ) from None
+
+
+def _archive_faults(content: bytes, name: str) -> list[str]:
+    if content.startswith(_OLD_FORMAT):
+        return [f"{name}: an old or locked workbook; save it as .xlsx without a password"]
+    try:
+        with zipfile.ZipFile(io.BytesIO(content)) as archive:
+            members = archive.infolist()
+            return _size_faults(members, name) or _content_faults(archive, members, name)
+    except (
+        zipfile.BadZipFile, zlib.error, NotImplementedError, RuntimeError, OSError, EOFError,
+    ):  # fmt: skip
+        return [f"{name}: not a workbook, or cut off; save the table as .xlsx again"]
+
+
+def _size_faults(members: Sequence[zipfile.ZipInfo], name: str) -> list[str]:
+    """Look at the sizes in the directory: nothing is unpacked that would not end."""
+    if len(members) > MOST_MEMBERS:
+        return [f"{name}: {len(members)} files inside; a table has some ten. Not opened"]
+    total = sum(member.file_size for member in members)
+    if total > MOST_UNPACKED:
+        return [f"{name}: unpacks to {total / 1e6:.0f} MB; keep the claims alone. Not opened"]
+    for member in members:
+        grows = member.file_size / max(member.compress_size, 1)
+        if member.file_size > SMALL_MEMBER and grows > MOST_RATIO:
+            return [f"{name}: a file inside unpacks to {grows:.0f} times its size. Not opened"]
+    return []
+
+
+def _content_faults(
+    archive: zipfile.ZipFile, members: Sequence[zipfile.ZipInfo], name: str
+) -> list[str]:
+    names = [member.filename for member in members]
+    if not any(_SHEET.fullmatch(n) for n in names):
+        return [f"{name}: a zip archive without a worksheet; save the table as .xlsx"]
+    if any("vbaproject" in n.lower() or "macrosheets" in n.lower() for n in names):
+        return [f"{name}: holds macros; save it as .xlsx without them"]
+    faults = []
+    for member in members:
+        if not member.filename.lower().endswith((".xml", ".rels")):
+            continue
+        text = archive.read(member)
+        if b"<!DOCTYPE" in text or b"<!ENTITY" in text:
+            return [f"{name}: holds declarations that no spreadsheet writes. Not opened"]
+        if b"macroEnabled" in text:
+            return [f"{name}: a workbook that may hold macros; save it as .xlsx without them"]
+        if _SHEET.fullmatch(member.filename):
+            faults += [
+                f"{name}: cells {found.decode()} are merged; split them, one value in each cell"
+                for found in _MERGED.findall(text)[:10]
+            ]
+    return faults
+
+
+def _rows(rows: Iterator[tuple[Cell, ...]], name: str) -> Iterator[list[str]]:
+    formulas: list[str] = []
+    for number, row in enumerate(rows, start=1):
+        made = []
+        for at, cell in enumerate(row, start=1):
+            if cell.data_type == "f":
+                formulas.append(f"{name}: cell {_column(at)}{number}: holds a formula; {_INSTEAD}")
+                made.append("")
+            else:
+                made.append(_shown(cell))
+        yield made
+    if formulas:
+        kept = formulas[:_FORMULAS_TOLD]
+        more = len(formulas) - len(kept)
+        raise UserError(kept + ([f"{name}: and {more} formulas more"] if more else []))
+
+
+_INSTEAD = "write the value that it shows (copy, paste as values)"
+_FORMULAS_TOLD = 20
+
+
+def _column(at: int) -> str:
+    from openpyxl.utils import get_column_letter  # noqa: PLC0415 - for a message
+
+    return str(get_column_letter(at))
+
+
+def _shown(cell: Cell) -> str:
+    """Return a cell's text as the spreadsheet shows it: 0.5 under the format 0.00 is 0.50."""
+    value = cell.value
+    if value is None:
+        return ""
+    if isinstance(value, bool) or not isinstance(value, int | float):
+        is_date = isinstance(value, dt.date | dt.time | dt.timedelta)
+        return f"{value} (a date)" if is_date else str(value)
+    shown = str(cell.number_format or "General")
+    plain = _DECIMALS.match(shown)
+    if plain:
+        return f"{value:.{len(plain[1] or '')}f}"
+    powers = _POWERS.match(shown)
+    if powers:
+        return f"{value:.{len(powers[1] or '')}e}"
+    return str(value) if isinstance(value, int) else f"{value:.{_GENERAL_DIGITS}g}"
+
+
+def workbook_bytes(headings: Sequence[str], rows: Sequence[Sequence[str]]) -> bytes:
+    """Return a workbook with one sheet in which every cell is text and keeps what is typed."""
+    from openpyxl import Workbook  # noqa: PLC0415 - 0.2 s, for workbooks alone
+    from openpyxl.styles import Font  # noqa: PLC0415 - with it
+
+    book = Workbook()
+    sheet = book.active
+    if sheet is None:
+        msg = "a new workbook has a sheet"
+        raise TypeError(msg)
+    sheet.title = "Claims"
+    sheet.freeze_panes = "A2"
+    for number, row in enumerate([headings, *rows], start=1):
+        for at, text in enumerate(row, start=1):
+            cell = sheet.cell(number, at)
+            cell.value = text or None
+            cell.number_format = "@"  # text as typed: 0.50 stays 0.50
+            if number == 1:
+                cell.font = Font(bold=True)
+    for at, heading in enumerate(headings, start=1):
+        sheet.column_dimensions[_column(at)].width = _WIDTHS.get(heading, 12)
+    stream = io.BytesIO()
+    book.save(stream)
+    return stream.getvalue()
