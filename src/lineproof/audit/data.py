@@ -94,13 +94,15 @@ class Verdict(StrEnum):
 class Slip:
     """One slip that reproduces a claimed value: its kind, the checker's sentence, its value.
 
-    ``likely`` orders slips of one line, the most plausible first; it is no probability.
+    ``likely`` orders slips of one line, the most plausible first; it is no probability. ``also``
+    names other kinds of slip that give the very same value.
     """
 
     kind: str
     sentence: str
     value: float
     likely: float
+    also: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,0 +1,83 @@
+"""Which slips a checker would name first."""
+
+from __future__ import annotations
+
+import math
+from collections import Counter
+from collections.abc import Iterable, Sequence
+from typing import NamedTuple
+
+from lineproof.audit.data import Claim, Slip
+from lineproof.audit.slip_edits import Edit
+from lineproof.audit.slip_kinds import FAMILIES
+
+MOST = 8
+"""So many slips of one line are told."""
+LEAST_LIKELY = 2e-4
+"""Below this share a fit is as good as chance, and is not told."""
+_SAME = 1e-9
+
+
+class Fit(NamedTuple):
+    """An edit that reproduces the claim: its value and half width at the claim, and its share.
+
+    ``where`` says in which line, if not in the claimed one.
+    """
+
+    edit: Edit
+    value: float
+    half: float
+    share: float
+    where: str = ""
+
+
+def shares(edits: Sequence[Edit]) -> dict[str, float]:
+    """Return the share of one edit of each family: the family's share over its different values."""
+    different = Counter(
+        family for family, _ in {(edit.family, f"{edit.value:.9g}") for edit in edits}
+    )
+    return {family: FAMILIES[family].share / count for family, count in different.items()}
+
+
+def likely(fit: Fit, claim: Claim) -> float:
+    """Return how likely a fit is beside others: its share, less where it is far-fetched or loose.
+
+    A wide result is met by more claims than a narrow one, so that it says less when it is met.
+    """
+    own = claim.stands_for.half
+    width = own + fit.half
+    off = abs(fit.value - claim.stands_for.middle) / width if width else 0.0
+    narrow = own / width if width else 1.0
+    return fit.share * math.exp(-fit.edit.far - 0.7 * off**2) * math.sqrt(max(narrow, 0.02))
+
+
+def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
+    """Return the slips, the most plausible first; the same value found twice is told once."""
+    ordered = sorted(
+        ((likely(fit, claim), order, fit) for order, fit in enumerate(fits)),
+        key=lambda row: (-row[0], row[1]),
+    )
+    told: list[Slip] = []
+    for share, _, fit in ordered:
+        kind = FAMILIES[fit.edit.family].kind
+        same = next((k for k, slip in enumerate(told) if _equal(slip.value, fit.value)), None)
+        if same is not None:
+            told[same] = _also(told[same], kind)
+        elif share >= LEAST_LIKELY and len(told) < MOST:
+            told.append(Slip(kind, _sentence(fit, claim), fit.value, share))
+    return tuple(told)
+
+
+def _also(slip: Slip, kind: str) -> Slip:
+    if kind == slip.kind or kind in slip.also:
+        return slip
+    return Slip(slip.kind, slip.sentence, slip.value, slip.likely, (*slip.also, kind))
+
+
+def _equal(first: float, second: float) -> bool:
+    return abs(first - second) <= _SAME * max(abs(first), abs(second))
+
+
+def _sentence(fit: Fit, claim: Claim) -> str:
+    how = "exactly" if claim.stands_for.holds(fit.value) else "within the digits of its arguments"
+    return f"Reproduced {how} with {fit.edit.words()}{fit.where}."
