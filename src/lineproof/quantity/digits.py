@@ -8,7 +8,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Sequence
 from decimal import ROUND_HALF_UP, Context, Decimal
-from functools import cache
+from functools import cache, lru_cache
 from typing import NamedTuple
 
 from lineproof.quantity.quick_digits import (
@@ -24,6 +24,8 @@ MOST_DIGITS = 6
 ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
+MOST_KEPT = 4096
+"""Rounded numbers that are kept: the lines of a beam use the same ones again and again."""
 _EXACT = Context(prec=400, rounding=ROUND_HALF_UP)
 
 
@@ -39,6 +41,7 @@ def significant(value: float | Decimal, digits: int) -> Decimal:
     return _context(digits).plus(Decimal(value))
 
 
+@lru_cache(maxsize=MOST_KEPT)
 def rounded_value(value: float, digits: int) -> float:
     """Return :func:`significant` as a float: what a reader of the printed number reckons with."""
     quick = quick_value(value, digits)
@@ -149,37 +152,66 @@ def choose_digits(
     ``wanted`` asks for more digits than the start, as far as they can be had.
     """
     first = max(start_digits(result, unit), needed, min(wanted, MOST_DIGITS))
-    digits = [a.digits for a in args]
-    plain = decimals is None or needed
-    if plain and _agrees(function, _printed(args, digits), result, first):
-        return Chosen(tuple(digits), first)
+    substituted = _Substituted(function, args, result)
+    plain = decimals is None or bool(needed)
+    if plain and substituted.gives(first):
+        return Chosen(tuple(substituted.digits), first)
     fewer = [first] if needed else [*range(first, 0, -1), *range(-MOST_DECIMALS, 1)]
     if decimals is not None and not needed:
         fewer = [*range(-decimals, 1)]
-    for limit, result_digits in [*((MOST_DIGITS, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
-        while not _agrees(function, _printed(args, digits), result, result_digits):
-            longest = _most_moving(function, args, digits, result, limit)
-            if longest is None:
-                break
-            digits[longest] += 1
-        else:
-            return Chosen(tuple(digits), result_digits)
-    return Chosen(tuple(digits), needed or 1)
+    for limit, digits in [*((MOST_DIGITS, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
+        if substituted.lengthened(digits, limit):
+            return Chosen(tuple(substituted.digits), digits)
+    return Chosen(tuple(substituted.digits), needed or 1)
 
 
-def _printed(args: Sequence[Argument], digits: Sequence[int]) -> list[float]:
-    return [
-        a.exact if a.exact is not None else rounded_value(a.value, n)
-        for a, n in zip(args, digits, strict=True)
-    ]
+class _Substituted:
+    """A function of printed arguments, beside the result that it should give."""
 
+    def __init__(
+        self, function: Callable[..., float], args: Sequence[Argument], result: float
+    ) -> None:
+        self.digits = [a.digits for a in args]
+        self._function, self._args, self._result = function, args, result
+        self._printed = [
+            rounded_value(a.value, a.digits) if a.exact is None else a.exact for a in args
+        ]
+        self._moves: list[float | None] = []
 
-def _agrees(
-    function: Callable[..., float], printed: Sequence[float], result: float, digits: int
-) -> bool:
-    shown = rounded_value(result, digits)
-    missed = abs(_call(function, printed) - shown)
-    return missed <= last_unit(result, digits) / 2 * (1 + 1e-9)
+    def gives(self, digits: int) -> bool:
+        """Tell whether it rounds to the result printed to so many digits."""
+        missed = abs(_call(self._function, self._printed) - rounded_value(self._result, digits))
+        return missed <= last_unit(self._result, digits) / 2 * (1 + 1e-9)
+
+    def lengthened(self, digits: int, limit: int) -> bool:
+        """Lengthen arguments, to a limit, until it gives the result; tell whether it does."""
+        while not self.gives(digits):
+            at = self._most_moving(limit)
+            if at is None:
+                return False
+            self.digits[at] += 1
+            self._printed[at] = rounded_value(self._args[at].value, self.digits[at])
+            self._moves[at] = self._move(at)
+        return True
+
+    def _most_moving(self, limit: int) -> int | None:
+        """Return the argument whose rounding moves the result most, the first of equal ones."""
+        self._moves = self._moves or [self._move(at) for at in range(len(self._args))]
+        open_ = [
+            (move, -at)
+            for at, move in enumerate(self._moves)
+            if move is not None and self.digits[at] < limit
+        ]
+        return -max(open_)[1] if open_ else None
+
+    def _move(self, at: int) -> float | None:
+        """Return how far rounding one argument alone moves the result; None if it is exact."""
+        rounded = self._printed[at]
+        if self._args[at].exact is not None or rounded == self._args[at].value:
+            return None
+        alone = [a.value for a in self._args]
+        alone[at] = rounded
+        return abs(_call(self._function, alone) - self._result)
 
 
 def _call(function: Callable[..., float], args: Sequence[float]) -> float:
@@ -188,20 +220,3 @@ def _call(function: Callable[..., float], args: Sequence[float]) -> float:
     except (ArithmeticError, ValueError, TypeError):  # TypeError: a root of a negative compared
         return math.inf
     return value if isinstance(value, float) and not math.isnan(value) else math.inf
-
-
-def _most_moving(
-    function: Callable[..., float],
-    args: Sequence[Argument],
-    digits: Sequence[int],
-    result: float,
-    limit: int,
-) -> int | None:
-    exact = [a.value for a in args]
-    moves = []
-    for i, (argument, n) in enumerate(zip(args, digits, strict=True)):
-        rounded = rounded_value(argument.value, n)
-        if argument.exact is None and n < limit and rounded != argument.value:
-            alone = [*exact[:i], rounded, *exact[i + 1 :]]
-            moves.append((abs(_call(function, alone) - result), -i))
-    return -max(moves)[1] if moves else None

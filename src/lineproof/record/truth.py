@@ -4,14 +4,16 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from decimal import Decimal
+from functools import lru_cache
 
 from lineproof.formula import Criterion
 from lineproof.formula.compiled import COMPARE, PLAIN_COMPARE
-from lineproof.quantity.digits import ALL_DIGITS, Argument, rounded_text, rounded_value
+from lineproof.quantity.digits import ALL_DIGITS, MOST_KEPT, Argument, rounded_text, rounded_value
 from lineproof.quantity.quick_digits import quick_text
 from lineproof.quantity.units import UNITS, factor, power_of_ten
 
 
+@lru_cache(maxsize=MOST_KEPT)
 def in_unit(value: float, unit: str, digits: int) -> str:
     """Return an internal value printed in a unit to so many significant digits."""
     power = power_of_ten(unit, UNITS[unit].internal)
