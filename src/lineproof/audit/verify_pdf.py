@@ -1,0 +1,347 @@
+"""A PDF package verified: its records, its pages, and what others have done to it."""
+
+from __future__ import annotations
+
+import io
+import logging
+import re
+from collections.abc import Iterator, Sequence
+from contextlib import contextmanager
+from dataclasses import dataclass, field, replace
+from typing import Any
+
+from lineproof.audit.verify_data import Alteration, Outcome, Outside, Proof, Verification, Where
+from lineproof.audit.verify_page import Document, Keys, Kind, Mark, Zone
+from lineproof.audit.verify_printed import compare_pages
+from lineproof.audit.verify_record import (
+    NOT_PRINTED,
+    Source,
+    altered_records,
+    differing_records,
+    lines_of,
+    not_printed,
+    printed_again,
+)
+from lineproof.errors import UserError
+from lineproof.package import records_in_pdf, to_pdf
+from lineproof.package.reviewed import REVIEW_SUFFIX
+from lineproof.record import Record
+
+_SUFFIX = ".lineproof.json"
+_FOOTER = re.compile(r"Record ([0-9a-f]{16}[0-9a-f ]*…?)\Z")
+_MARKED = b"/Subtype/Footer/Type/Pagination"
+_END = re.compile(rb"%%EOF(?:\r\n|\r|\n|\Z)")
+_HEAD = 1024
+_LETTER, _A4 = (612.0, 792.0), (595.28, 841.89)
+_LINK = "/Link"
+
+
+def is_pdf(content: bytes) -> bool:
+    """Tell whether a file begins as a PDF."""
+    return b"%PDF-" in content[:_HEAD]
+
+
+def verify_pdf(content: bytes, name: str, against: Sequence[Source] = ()) -> Verification:
+    """Verify a PDF; raises :class:`UserError` for one that cannot be read."""
+    with _silent():
+        file = _File(content)
+        found = _Checking(file, against).verification(name)
+        ends = [end.end() for end in _END.finditer(content)]
+        if found.outcome is Outcome.ALTERED and len(ends) > 1:
+            found = _issued_intact(found, content[: ends[0]], name, against)
+    return found
+
+
+def _issued_intact(
+    found: Verification, first: bytes, name: str, against: Sequence[Source]
+) -> Verification:
+    """Say so where what was altered was appended to a file that was intact."""
+    try:
+        issued = _Checking(_File(first), against).verification(name)
+    except UserError:
+        return found
+    if not issued.intact:
+        return found
+    told = f"the first {len(first)} bytes are the package as issued, intact: the change is appended"
+    return replace(found, remarks=(*found.remarks, told))
+
+
+@contextmanager
+def _silent() -> Iterator[None]:
+    """Keep the PDF library from writing its warnings between our own sentences."""
+    logger = logging.getLogger("pypdf")
+    level = logger.level
+    logger.setLevel(logging.CRITICAL + 1)
+    try:
+        yield
+    finally:
+        logger.setLevel(level)
+
+
+class _File:
+    """A PDF opened: its pages, what is attached to it, what others have done to it."""
+
+    def __init__(self, content: bytes) -> None:
+        import pypdf  # noqa: PLC0415 - only reading a PDF needs it
+        import pypdf.errors  # noqa: PLC0415 - as above
+
+        self.content = content
+        if not is_pdf(content):
+            raise UserError("not a PDF, whatever its name says; give a package as it was issued")
+        if not _END.search(content):
+            raise UserError("this PDF is damaged, its end is missing; give the whole file")
+        try:
+            self.reader = pypdf.PdfReader(io.BytesIO(content))
+            if self.reader.is_encrypted:
+                raise UserError("this PDF is encrypted; give it without a password")
+            self.pages: list[Any] = list(self.reader.pages)
+            self.attached = {name: parts for name, parts in self.reader.attachments.items() if parts}
+        except UserError:
+            raise
+        except Exception as error:  # noqa: BLE001 - damage makes it fail in any of its layers
+            reason = f"{type(error).__name__}: {error}"[:80]
+            raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
+
+    def records(self) -> list[Record]:
+        """Return the records attached, in order; raises :class:`UserError`."""
+        if not any(name.endswith(_SUFFIX) for name in self.attached):
+            return []
+        return [Record.from_data(data) for data in records_in_pdf(self.content)]
+
+    def review(self, calc: str) -> str:
+        """Return the text of the review attached for a calculation, "" if there is none."""
+        parts = self.attached.get(f"{calc}{REVIEW_SUFFIX}", [])
+        return parts[0].decode("utf-8", "replace") if parts else ""
+
+    def paper(self, page: Any) -> str:
+        """Return the paper of a page as the package names it, "" for any other."""
+        size = (float(page.mediabox.width), float(page.mediabox.height))
+        for paper, wanted in (("us-letter", _LETTER), ("a4", _A4)):
+            if all(abs(a - b) < 1 for a, b in zip(size, wanted, strict=True)):
+                return paper
+        return ""
+
+    def handled(self) -> list[str]:
+        """Say what others have done that alters no line: revisions, signatures, saving again."""
+        told = []
+        ends = len(_END.findall(self.content))
+        if ends > 1:
+            told.append(f"{ends - 1} later change(s) appended to the file as issued")
+        told += [f"signed by others: {signer}; the signature itself is not checked here"
+                 for signer in self._signers()]  # fmt: skip
+        producer = str((self.reader.metadata or {}).get("/Producer", ""))
+        if producer:
+            told.append(f"saved again by {producer[:60]}")
+        return told
+
+    def _signers(self) -> list[str]:
+        form = self.reader.root_object.get("/AcroForm")
+        fields = form.get_object().get("/Fields", []) if form is not None else []
+        signed = []
+        for reference in fields:
+            entry = reference.get_object()
+            if entry.get("/FT") == "/Sig":
+                value = entry.get("/V")
+                named = value.get_object().get("/Name", "") if value is not None else ""
+                signed.append(str(named or entry.get("/T", "") or "no name given")[:60])
+        return signed
+
+    def annotations(self, page: Any) -> list[str]:
+        """Name what others have laid over a page: comments, stamps, signatures that show."""
+        found = []
+        for reference in page.get("/Annots", None) or []:
+            entry = reference.get_object()
+            kind = str(entry.get("/Subtype", ""))
+            if kind != _LINK or "/AP" in entry:
+                text = str(entry.get("/Contents", "") or "")[:60]
+                found.append(f"{kind.lstrip('/') or 'annotation'}{f' “{text}”' if text else ''}")
+        return found
+
+
+@dataclass
+class _Own:
+    """The pages of one package: records named in its footers, numbers of its pages from 0."""
+
+    footer: str
+    pages: list[int] = field(default_factory=list)
+    marks: list[Mark] = field(default_factory=list)
+    sources: list[Source] = field(default_factory=list)
+
+
+class _Checking:
+    """Everything that is looked at in one file."""
+
+    def __init__(self, file: _File, against: Sequence[Source]) -> None:
+        self.file, self.against = file, against
+        self.keys = Keys()
+        self.alterations: list[Alteration] = []
+        self.outside: list[Outside] = []
+        self.remarks: list[str] = []
+
+    def verification(self, name: str) -> Verification:
+        """Return what is found."""
+        records = self.file.records()
+        given = {source.record.calc_id: source for source in self.against}
+        sources = [
+            Source(
+                record,
+                given[record.calc_id].walk if record.calc_id in given else None,
+                self.file.review(record.calc_id),
+            )
+            for record in records
+        ]
+        stripped = not sources
+        self.alterations += altered_records(records)
+        if self.against and sources:
+            self.alterations += differing_records(records, self.against)
+        owns: list[_Own] = []
+        if not self._same_bytes(sources):
+            owns = self._owned([s.record for s in sources])
+            self._match(owns, sources or list(self.against))
+            for own in owns:
+                self._compare(own)
+        own_pages = sum(len(own.pages) for own in owns) if owns else len(self.file.pages)
+        if not sources and not owns:
+            return Verification(name, Outcome.NOT_OURS, pages=len(self.file.pages))
+        self._others(owns)
+        shown = sources or [source for own in owns for source in own.sources]
+        return Verification(
+            file=name,
+            outcome=self._outcome(stripped=stripped),
+            proofs=tuple(
+                Proof(s.record.calc_id, s.record.digest, len(s.record.entries)) for s in shown
+            ),
+            alterations=tuple(self.alterations),
+            outside=tuple(self.outside),
+            remarks=tuple(self.remarks),
+            pages=len(self.file.pages),
+            own_pages=own_pages,
+        )
+
+    def _outcome(self, *, stripped: bool) -> Outcome:
+        if stripped:
+            return Outcome.STRIPPED
+        if self.alterations:
+            return Outcome.ALTERED
+        return Outcome.HANDLED if self.remarks else Outcome.INTACT
+
+    def _same_bytes(self, sources: Sequence[Source]) -> bool:
+        """Tell whether the file is what our printer gives for its records, byte for byte."""
+        if not sources or not self.file.pages:
+            return False
+        try:
+            package = printed_again(sources, self.file.paper(self.file.pages[0]))
+            return to_pdf(package) == self.file.content
+        except NOT_PRINTED as error:
+            self.alterations.append(not_printed(error, sources))
+            return False
+
+    # -- pages ---------------------------------------------------------------------------------
+
+    def _owned(self, records: Sequence[Record]) -> list[_Own]:
+        """Gather the pages that bear our footer by what it says."""
+        document = Document(self.keys)
+        digests = {record.digest for record in (*records, *(s.record for s in self.against))}
+        groups: dict[str, _Own] = {}
+        for number, page in enumerate(self.file.pages):
+            footer, marks = self._read(document, page, number, digests)
+            if not footer:
+                continue
+            own = groups.setdefault(footer, _Own(footer))
+            own.marks += [mark._replace(page=len(own.pages)) for mark in marks]
+            own.pages.append(number)
+        return list(groups.values())
+
+    def _read(
+        self, document: Document, page: Any, number: int, digests: set[str]
+    ) -> tuple[str, list[Mark]]:
+        """Return what the footer of a page says and its marks; "" for a page of others."""
+        try:
+            contents = page.get_contents()
+            content = b"" if contents is None else contents.get_data()
+            if _MARKED in content:
+                marks = document.marks(page, number)
+                footers = (_FOOTER.match(m.text) for m in marks if m.zone is Zone.RUNNING)
+                footer = next((found[1] for found in footers if found), "")
+                return footer, marks
+            if digests and b"Pagination" in content:
+                text = page.extract_text()
+                footer = next((digest for digest in digests if digest in text), "")
+                return footer, [Mark(-1, Kind.FOREIGN, Zone.BODY, number, 0.0, 0.0)]
+        except (ValueError, KeyError, TypeError, AttributeError, IndexError):
+            return "", []  # a page that we have not printed may be as odd as it likes
+        return "", []
+
+    def _match(self, owns: list[_Own], sources: Sequence[Source]) -> None:
+        """Find the records of each package by the digests in its footers."""
+        waiting = list(sources)
+        for own in owns:
+            words = own.footer.split()
+            own.sources = [s for s in waiting if s.record.digest in words]
+            waiting = [s for s in waiting if s not in own.sources]
+        for own in owns:
+            if own.footer.endswith("…") and own.sources:
+                own.sources, waiting = own.sources + waiting, []
+        for own in list(owns):
+            if not own.sources:
+                self._unmatched(own, owns, waiting)
+        for source in waiting if owns or not self.against else ():
+            what = "its record is attached but none of its pages is in the file"
+            self.alterations.append(Alteration(Where.PRINT, what, source.record.calc_id))
+
+    def _unmatched(self, own: _Own, owns: list[_Own], waiting: list[Source]) -> None:
+        """Tell of pages whose footer names a record that is not there."""
+        what = f"the footer names record {own.footer}, which is not attached"
+        self.alterations.append(Alteration(Where.PRINT, what, page=own.pages[0] + 1))
+        around = [o for o in owns if o.sources and o.pages[0] < own.pages[-1]]
+        if waiting:
+            own.sources = [waiting.pop(0)]
+        elif around:  # a page of the package before it, with its footer altered
+            home = around[-1]
+            both = sorted([*home.pages, *own.pages])
+            marks = [(home.pages[m.page], m) for m in home.marks]
+            marks += [(own.pages[m.page], m) for m in own.marks]
+            home.marks = [
+                m._replace(page=both.index(page)) for page, m in sorted(marks, key=lambda p: p[0])
+            ]
+            home.pages = both
+            owns.remove(own)
+
+    def _compare(self, own: _Own) -> None:
+        if not own.sources:
+            return
+        try:
+            package = printed_again(own.sources, self.file.paper(self.file.pages[own.pages[0]]))
+            fresh = _File(to_pdf(package))
+        except NOT_PRINTED as error:
+            self.alterations.append(not_printed(error, own.sources))
+            return
+        document = Document(self.keys)
+        marks = [m for n, page in enumerate(fresh.pages) for m in document.marks(page, n)]
+        compared = compare_pages(
+            marks, own.marks, lines_of(own.sources), [page + 1 for page in own.pages]
+        )
+        self.alterations += compared.alterations
+        if any(source.walk is None for source in own.sources):
+            self.outside += compared.outside
+        else:
+            self.alterations += [
+                Alteration(Where.PRINT, "text that the notebook does not hold", page=outside.page,
+                           found=outside.text)
+                for outside in compared.outside
+            ]  # fmt: skip
+
+    def _others(self, owns: Sequence[_Own]) -> None:
+        """Note what others have done."""
+        self.remarks += self.file.handled()
+        mine = {page for own in owns for page in own.pages}
+        others = len(self.file.pages) - len(mine) if owns else 0
+        if others:
+            self.remarks.append(f"{others} page(s) of others before, between or after")
+        for number, page in enumerate(self.file.pages):
+            if owns and number not in mine:
+                continue
+            for told in self.file.annotations(page):
+                self.remarks.append(f"page {number + 1}: laid over by others: {told}")
+        if len(owns) > 1:
+            self.remarks.append(f"{len(owns)} packages in one file")
