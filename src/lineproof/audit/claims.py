@@ -12,7 +12,7 @@ from lineproof.audit.blank import quick_lines
 from lineproof.audit.data import Claim, read_from
 from lineproof.audit.effects import place_of
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.tables import MOST_FAULTS, Row, Table, TableFaults, read_table
+from lineproof.audit.tables import MOST_FAULTS, Row, Table, TableFaults, read_with_faults
 from lineproof.errors import UserError
 from lineproof.quantity import echo, internal_factor, read_quantity
 
@@ -30,12 +30,11 @@ def read_claims(graph: Graph, path: Path) -> tuple[Claim, ...]:
     number in ``claimed`` with its unit there or in ``unit``. Raises :class:`UserError` with all
     faults: lines not known (the nearest are named), units left out, duplicates, no numbers.
     """
-    return claims_of(graph, read_table(path))
+    return claims_of(graph, *read_with_faults(path))
 
 
-def claims_of(graph: Graph, table: Table) -> tuple[Claim, ...]:
+def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, ...]:
     """Return the claims of a table that has been read; faults as :func:`read_claims`."""
-    faults = TableFaults(table.name)
     column = next((name for name in CLAIMED if name in table.headings), None)
     if column is None:
         faults.add(f"{table.name}: row 1: no heading 'claimed'; write 'id,claimed,unit'")
@@ -48,7 +47,7 @@ def claims_of(graph: Graph, table: Table) -> tuple[Claim, ...]:
         for row in table.rows
         if row.cells.get(column or "")
     ]
-    if not claims:
+    if not claims and not faults.faults:
         faults.add(f"{table.name}: no row has a value in the column {column!r}; write one")
     faults.raise_if_any()
     return tuple(claim for claim in claims if claim is not None)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Container, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
+from itertools import chain
 
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
@@ -58,7 +59,10 @@ class _Judge:
         self.worker = Worker(graph)
         self.twins = twins_of(graph, self._deviating(), self.claims)
         self.worlds = self._worlds()
-        self.bench = Bench(self.worker, self.worlds.claimed, frozenset(self.claims))
+        worlds = [self.worlds.claimed]
+        if self.worlds.sound is not self.worlds.claimed:
+            worlds.append(self.worlds.sound)
+        self.benches = [Bench(self.worker, w, frozenset(self.claims)) for w in worlds]
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
@@ -168,7 +172,7 @@ class _Judge:
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
-        for other in other_ways(self.bench, node):
+        for other in chain.from_iterable(other_ways(bench, node) for bench in self.benches):
             if claim.stands_for.meets(other.interval):
                 return replace(made, verdict=Verdict.OTHER_METHOD, note=other.sentence)
         rounded = coarse_rounding(claim, around)

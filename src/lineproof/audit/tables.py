@@ -74,6 +74,16 @@ def read_table(path: Path) -> Table:
     Raises :class:`UserError` with every fault: formulas, merged cells, macros, a file that is too
     large or no table at all.
     """
+    table, faults = read_with_faults(path)
+    faults.raise_if_any()
+    return table
+
+
+def read_with_faults(path: Path) -> tuple[Table, TableFaults]:
+    """Read a table and the faults of its cells, so that a reader can tell its own with them.
+
+    Raises :class:`UserError` at once for what is no table.
+    """
     name, ending = str(path), path.suffix.lower()
     if ending in _MACROS:
         raise UserError(f"{name}: a workbook that may hold macros; save it as .xlsx without them")
@@ -130,7 +140,7 @@ def _delimiter(text: str) -> str:
     return max((",", ";", "\t"), key=first.count)
 
 
-def _table(name: str, raw: Iterator[list[str]]) -> Table:
+def _table(name: str, raw: Iterator[list[str]]) -> tuple[Table, TableFaults]:
     """Check the shape of the rows and put their cells under the headings."""
     faults = TableFaults(name)
     headings = _headings(next(raw, []), faults)
@@ -146,8 +156,7 @@ def _table(name: str, raw: Iterator[list[str]]) -> Table:
             )
             break
         rows.append(Row(number, _cells(number, cells, headings, faults)))
-    faults.raise_if_any()
-    return Table(name, headings, tuple(rows))
+    return Table(name, headings, tuple(rows)), faults
 
 
 def _headings(cells: Sequence[str], faults: TableFaults) -> tuple[str, ...]:

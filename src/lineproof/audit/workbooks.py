@@ -35,8 +35,8 @@ _WIDTHS = {"id": 26, "label": 8, "place": 44, "symbol": 10, "title": 48, "claime
 def read_workbook(content: bytes, name: str) -> Iterator[list[str]]:
     """Give the rows of a workbook's first sheet as text, as the cells show them.
 
-    Raises :class:`UserError` for macros, formulas, merged cells, and for an archive that unpacks
-    into more than a table needs.
+    A formula is given as its text, which begins with ``=``. Raises :class:`UserError` for macros,
+    merged cells, and for an archive that unpacks into more than a table needs.
     """
     faults = _archive_faults(content, name)
     if faults:
@@ -46,9 +46,7 @@ def read_workbook(content: bytes, name: str) -> Iterator[list[str]]:
     try:
         book = load_workbook(io.BytesIO(content), read_only=True, data_only=False)
         first = book.worksheets[0]
-        yield from _rows(first.iter_rows(max_row=_ROWS_READ, max_col=_COLUMNS_READ), name)
-    except UserError:
-        raise
+        yield from _rows(first.iter_rows(max_row=_ROWS_READ, max_col=_COLUMNS_READ))
     except Exception:  # noqa: BLE001 - a broken workbook raises whatever its reader meets
         raise UserError(
             f"{name}: cannot be read as a workbook; open it in a spreadsheet and save it again"
@@ -107,29 +105,13 @@ def _content_faults(
     return faults
 
 
-def _rows(rows: Iterator[tuple[Cell, ...]], name: str) -> Iterator[list[str]]:
-    formulas: list[str] = []
-    for number, row in enumerate(rows, start=1):
-        made = []
-        for at, cell in enumerate(row, start=1):
-            if cell.data_type == "f":
-                formulas.append(f"{name}: cell {_column(at)}{number}: holds a formula; {_INSTEAD}")
-                made.append("")
-            else:
-                made.append(_shown(cell))
-        yield made
-    if formulas:
-        kept = formulas[:_FORMULAS_TOLD]
-        more = len(formulas) - len(kept)
-        raise UserError(kept + ([f"{name}: and {more} formulas more"] if more else []))
-
-
-_INSTEAD = "write the value that it shows (copy, paste as values)"
-_FORMULAS_TOLD = 20
+def _rows(rows: Iterator[tuple[Cell, ...]]) -> Iterator[list[str]]:
+    for row in rows:
+        yield [_shown(cell) for cell in row]
 
 
 def _column(at: int) -> str:
-    from openpyxl.utils import get_column_letter  # noqa: PLC0415 - for a message
+    from openpyxl.utils import get_column_letter  # noqa: PLC0415 - with it
 
     return str(get_column_letter(at))
 
@@ -139,6 +121,8 @@ def _shown(cell: Cell) -> str:
     value = cell.value
     if value is None:
         return ""
+    if cell.data_type == "f":  # an array formula is an object
+        return value if isinstance(value, str) else "={...}"
     if isinstance(value, bool) or not isinstance(value, int | float):
         is_date = isinstance(value, dt.date | dt.time | dt.timedelta)
         return f"{value} (a date)" if is_date else str(value)

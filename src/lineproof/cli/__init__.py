@@ -39,6 +39,7 @@ def parser() -> argparse.ArgumentParser:
     _add_issue(commands)
     _add_recheck(commands)
     _add_lines(commands)
+    _add_audit(commands)
     return made
 
 
@@ -85,6 +86,29 @@ def _add_lines(commands: _Commands[argparse.ArgumentParser]) -> None:
     )
     lines.add_argument("file", type=Path, metavar="FILE")
     lines.add_argument("--json", action="store_true", help="print JSON instead of a table")
+
+
+def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
+    audit = commands.add_parser(
+        "audit",
+        help="check claims of another calculation against a calc, or search a calc; runs nothing",
+        description="With --claims: judge every value that somebody else claims, and name the "
+        "origin of each error, the likely slip, and what it does to the checks. Without: search "
+        "the calc itself for wrong lines and for what is missing. Nothing in a file is run.",
+    )
+    audit.add_argument(
+        "record", type=Path, metavar="RECORD", help="notebook, PDF, HTML or record of the calc"
+    )
+    table = audit.add_mutually_exclusive_group()
+    table.add_argument("--claims", type=Path, metavar="FILE", help="filled table, .csv or .xlsx")
+    table.add_argument(
+        "--blank", type=Path, metavar="FILE", help="write a blank table of what governs, and stop"
+    )
+    table.add_argument(
+        "--blank-full", type=Path, metavar="FILE", help="write a blank table of every line"
+    )
+    audit.add_argument("--calc", metavar="ID", help="which calc of a package of several")
+    audit.add_argument("--json", action="store_true", help="print JSON instead of text")
 
 
 def main(arguments: Sequence[str] | None = None) -> int:

@@ -1,0 +1,34 @@
+"""An audit of one calculation: claims judged, or the record searched alone; findings in order."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Sequence
+
+from lineproof.audit.data import Audit, Claim, Finding
+from lineproof.audit.findings import findings_of, importance
+from lineproof.audit.graph import Graph
+from lineproof.audit.judge import judge
+from lineproof.audit.junior import audit_record
+from lineproof.audit.missing import missing_checks
+from lineproof.audit.slips import find_slips
+from lineproof.record import Record
+
+SEARCHES: tuple[Callable[[Record], tuple[Finding, ...]], ...] = (audit_record, missing_checks)
+"""The searches of a record by itself."""
+
+
+def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = None) -> Audit:
+    """Return every claim judged, and what a checker writes down about them, by what it matters.
+
+    ``record`` is the right calculation; ``graph`` may be given where it was made already.
+    """
+    graph = graph or Graph(record)
+    judged = judge(graph, claims, find_slips)
+    return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged))
+
+
+def audit_alone(record: Record, more: Iterable[Finding] = ()) -> Audit:
+    """Return what the searches find in a record by itself, with findings found elsewhere."""
+    found = [finding for search in SEARCHES for finding in search(record)]
+    ordered = sorted(dict.fromkeys([*more, *found]), key=importance)
+    return Audit(record.calc_id, record.digest, (), tuple(ordered))

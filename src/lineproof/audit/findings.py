@@ -1,0 +1,120 @@
+"""What a checker writes down about judged claims: findings, sorted by what they matter."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdict
+from lineproof.audit.effects import effects_of, named_line
+from lineproof.audit.graph import Graph, Node
+from lineproof.audit.slips import none_fits
+from lineproof.quantity.digits import rounded_text
+from lineproof.quantity.units import internal_factor
+
+SOURCE = "claims"
+FOUND = (
+    Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN,
+)  # fmt: skip
+"""Verdicts that a checker writes down; what a line carries is told at its origin."""
+_DIGITS = 4
+_MOST_EFFECTS = 300
+"""So many findings get their effects; more of them say that the claims are of another beam."""
+_ORDER = list(Severity)
+
+
+def findings_of(graph: Graph, judged: Sequence[Judged]) -> tuple[Finding, ...]:
+    """Return the findings of judged claims, those that matter most first."""
+    carried = _carried(judged)
+    found: list[Finding] = []
+    for each in judged:
+        if each.claim is None or each.verdict not in FOUND:
+            continue
+        effects: tuple[Effect, ...] = ()
+        if len(found) < _MOST_EFFECTS:
+            effects = effects_of(graph, {each.id: each.claim.value})
+        found.append(_finding(graph, each, each.claim, effects, carried.get(each.id, [])))
+    return tuple(sorted(found, key=importance))
+
+
+def importance(finding: Finding) -> tuple[int, int, float]:
+    """Return by what findings are sorted: severity, checks that turn, the largest change."""
+    turns = sum(e.holds != e.holds_as_claimed for e in finding.effects)
+    change = max((abs(_change(e)) for e in finding.effects), default=0.0)
+    return _ORDER.index(finding.severity), -turns, -change
+
+
+def _carried(judged: Sequence[Judged]) -> dict[str, list[str]]:
+    """Return by origin the ids of the claims that carry it."""
+    found: dict[str, list[str]] = {}
+    for each in judged:
+        if each.verdict is Verdict.CARRIED:
+            for cause in each.causes:
+                found.setdefault(cause, []).append(each.id)
+    return found
+
+
+def _finding(
+    graph: Graph, judged: Judged, claim: Claim, effects: tuple[Effect, ...], carried: list[str]
+) -> Finding:
+    node = graph[judged.id]
+    what = f"{named_line(graph, judged.id)}: {_words(node, judged, claim)}"
+    if carried:
+        what += f"; {_count(len(carried), 'claimed line carries', 'claimed lines carry')} it"
+    return Finding(
+        SOURCE, _severity(judged, effects), what, (judged.id, *carried),
+        str(node.entry.get("clause", "")), _advice(graph, judged), effects,
+    )  # fmt: skip
+
+
+def _count(number: int, one: str, many: str) -> str:
+    return f"{number} {one if number == 1 else many}"
+
+
+def _severity(judged: Judged, effects: Sequence[Effect]) -> Severity:
+    """Return how much a finding matters, by what it does to the checks."""
+    if any(e.holds_as_claimed and not e.holds for e in effects):
+        return Severity.CRITICAL
+    if judged.verdict in (Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN):
+        return Severity.MINOR
+    if any((e.holds and not e.holds_as_claimed) or _change(e) > 0 for e in effects):
+        return Severity.MAJOR
+    no_matter = judged.verdict is Verdict.INPUT and not effects
+    return Severity.OBSERVATION if no_matter else Severity.MINOR
+
+
+def _change(effect: Effect) -> float:
+    """Return by how much the right utilisation lies above the claimed one."""
+    if effect.right is None or effect.claimed is None:
+        return 0.0
+    return effect.right - effect.claimed
+
+
+def _advice(graph: Graph, judged: Judged) -> str:
+    if judged.slips:
+        sentence = judged.slips[0].sentence
+        return sentence[:1].upper() + sentence[1:]
+    if judged.verdict is Verdict.ORIGIN:
+        return none_fits(graph, judged.id)
+    if judged.verdict is Verdict.INPUT:
+        return "Settle which input is right, and rework what rests on it."
+    return ""
+
+
+def _words(node: Node, judged: Judged, claim: Claim) -> str:
+    if judged.verdict is Verdict.UNSAFE_ROUNDING:
+        return f"{as_typed(claim)} is {judged.note}"
+    if judged.verdict is not Verdict.ORIGIN:
+        return f"{as_typed(claim)} claimed; {judged.note}"
+    follows, right = shown(node, judged.follows.middle), shown(node, judged.right)
+    said = f"{as_typed(claim)} does not follow from the values that the claim uses; {follows} does"
+    return said if follows == right else f"{said}, and {right} is right"
+
+
+def as_typed(claim: Claim) -> str:
+    """Return a claimed number with its unit."""
+    return f"{claim.typed} {claim.unit}".rstrip()
+
+
+def shown(node: Node, value: float) -> str:
+    """Return a value of a line in its printed unit, to four digits."""
+    return f"{rounded_text(value / internal_factor(node.unit), _DIGITS)} {node.unit}".rstrip()

@@ -1,0 +1,149 @@
+"""An audit as text for the terminal and as plain data."""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Iterator
+from typing import Any
+
+from lineproof.audit.data import Audit, Effect, Finding, Judged, Severity, Slip, Verdict
+from lineproof.audit.findings import as_typed, shown
+from lineproof.audit.graph import Graph, Node
+from lineproof.quantity.units import internal_factor
+from lineproof.typeset import printable
+
+MOST_EFFECTS = 5
+MOST_SLIPS = 3
+_COUNTED = (
+    (Verdict.AGREES, "agrees", "agree"),
+    (Verdict.OTHER_METHOD, "follows by another valid method", "follow by another valid method"),
+    (Verdict.SAFE_ROUNDING, "is rounded conservatively", "are rounded conservatively"),
+    (Verdict.INPUT, "is another input", "are other inputs"),
+    (Verdict.ORIGIN, "is the origin of an error", "are origins of errors"),
+    (Verdict.CARRIED, "carries an error", "carry an error"),
+    (Verdict.UNIT, "is a slip of units", "are slips of units"),
+    (Verdict.UNSAFE_ROUNDING, "is rounded unconservatively", "are rounded unconservatively"),
+    (Verdict.UNKNOWN, "cannot be judged", "cannot be judged"),
+)
+_REMARKED = (Verdict.OTHER_METHOD, Verdict.SAFE_ROUNDING)
+"""Verdicts that are no findings, but of which a checker wants to read."""
+
+
+def as_text(audit: Audit, graph: Graph) -> list[str]:
+    """Return counts, findings by severity, and remarks, a line each."""
+    return [printable(line).rstrip() for line in _lines(audit, graph)]
+
+
+def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
+    title = graph.record.data["calc"].get("title", "")
+    yield f"{audit.calc}  {title}  digest {audit.digest}"
+    if audit.judged:
+        yield _counts(audit)
+    findings = audit.findings
+    yield _many(len(findings), "finding", "findings") if findings else "no findings"
+    number = 0
+    for severity in Severity:
+        group = [finding for finding in findings if finding.severity is severity]
+        if group:
+            yield ""
+            yield f"{severity}"
+        for finding in group:
+            number += 1
+            yield from _finding(number, finding)
+    yield from _remarks(audit, graph)
+
+
+def _counts(audit: Audit) -> str:
+    counts = Counter(judged.verdict for judged in audit.judged)
+    claimed = sum(judged.claim is not None for judged in audit.judged)
+    told = [_many(counts[v], one, many) for v, one, many in _COUNTED if counts[v]]
+    left = _many(counts[Verdict.NOT_CLAIMED], "line", "lines")
+    return f"{_many(claimed, 'claim', 'claims')}: {', '.join(told)}; {left} not claimed"
+
+
+def _many(number: int, one: str, many: str) -> str:
+    return f"{number} {one if number == 1 else many}"
+
+
+def _finding(number: int, finding: Finding) -> Iterator[str]:
+    clause = f" [{finding.clause}]" if finding.clause else ""
+    place = f"{finding.ids[0]}: " if finding.ids else ""
+    yield f"{number:4}  {place}{finding.what}{clause}"
+    if finding.advice:
+        yield f"      {finding.advice}"
+    for effect in finding.effects[:MOST_EFFECTS]:
+        yield f"      - {effect.sentence}"
+    if len(finding.effects) > MOST_EFFECTS:
+        yield f"      - and {_many(len(finding.effects) - MOST_EFFECTS, 'check', 'checks')} more"
+
+
+def _remarks(audit: Audit, graph: Graph) -> Iterator[str]:
+    remarked = [judged for judged in audit.judged if judged.verdict in _REMARKED]
+    if remarked:
+        yield ""
+        yield "no errors"
+    for judged in remarked:
+        node = graph[judged.id]
+        claim = as_typed(judged.claim) if judged.claim is not None else ""
+        yield f"      {judged.id} ({node.label}): {claim} claimed; {judged.note}"
+
+
+def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
+    """Return an audit as plain data: ``calc``, ``digest``, ``counts``, ``judged``, ``findings``.
+
+    Values of a judged line stand in ``unit``, the unit in which the line prints.
+    """
+    counts = Counter(str(judged.verdict) for judged in audit.judged)
+    return {
+        "calc": audit.calc,
+        "digest": audit.digest,
+        "counts": dict(sorted(counts.items())),
+        "judged": [_judged(j, graph[j.id]) for j in audit.judged if j.claim is not None],
+        "findings": [_finding_data(finding) for finding in audit.findings],
+    }
+
+
+def _judged(judged: Judged, node: Node) -> dict[str, Any]:
+    claim, factor = judged.claim, internal_factor(node.unit)
+    return {
+        "id": judged.id,
+        "label": node.label,
+        "title": node.title,
+        "verdict": str(judged.verdict),
+        "claimed": as_typed(claim) if claim is not None else "",
+        "row": claim.row if claim is not None else 0,
+        "unit": node.unit,
+        "follows": [judged.follows.low / factor, judged.follows.high / factor],
+        "right": judged.right / factor,
+        "shown": shown(node, judged.right),
+        "note": judged.note,
+        "slips": [_slip(slip, factor) for slip in judged.slips[:MOST_SLIPS]],
+        "causes": list(judged.causes),
+    }
+
+
+def _slip(slip: Slip, factor: float) -> dict[str, Any]:
+    return {"kind": slip.kind, "sentence": slip.sentence, "value": slip.value / factor}
+
+
+def _finding_data(finding: Finding) -> dict[str, Any]:
+    return {
+        "source": finding.source,
+        "severity": str(finding.severity),
+        "what": finding.what,
+        "ids": list(finding.ids),
+        "clause": finding.clause,
+        "advice": finding.advice,
+        "effects": [_effect(effect) for effect in finding.effects],
+    }
+
+
+def _effect(effect: Effect) -> dict[str, Any]:
+    return {
+        "check": effect.check,
+        "claimed": effect.claimed,
+        "right": effect.right,
+        "holds_as_claimed": effect.holds_as_claimed,
+        "holds": effect.holds,
+        "sentence": effect.sentence,
+    }
