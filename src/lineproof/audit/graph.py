@@ -182,7 +182,8 @@ class Graph:
                 if target not in reached:
                     reached.add(target)
                     waiting.append(target)
-        return [entry_id for entry_id in self.nodes if entry_id in reached - start]
+        reached -= start
+        return [entry_id for entry_id in self.nodes if entry_id in reached]
 
     def named(self, node: Node, values: Mapping[str, Number]) -> dict[str, Number]:
         """Return the values of a line's arguments by the names in its formula."""
