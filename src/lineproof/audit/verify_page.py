@@ -312,9 +312,7 @@ class _Page:
         alt = _PLACE_IN_FILE.sub(b"", properties)
         shown, text, _ = self._shown(rest)
         key = self.document.keys.of(("figure", alt, tuple(clip[::2]), shown))
-        return Mark(
-            key, Kind.FIGURE, self.zone, self.number, left, base, text, 0.0, tuple(heights)
-        )
+        return Mark(key, Kind.FIGURE, self.zone, self.number, left, base, text, 0.0, tuple(heights))
 
     @staticmethod
     def _taken(height: bytes, base: float, heights: list[float]) -> bytes:

@@ -95,7 +95,9 @@ class _File:
             if self.reader.is_encrypted:
                 raise UserError("this PDF is encrypted; give it without a password")
             self.pages: list[Any] = list(self.reader.pages)
-            self.attached = {name: parts for name, parts in self.reader.attachments.items() if parts}
+            self.attached = {
+                name: parts for name, parts in self.reader.attachments.items() if parts
+            }
         except UserError:
             raise
         except Exception as error:  # noqa: BLE001 - damage makes it fail in any of its layers
@@ -174,6 +176,7 @@ class _Checking:
     def __init__(self, file: _File, against: Sequence[Source]) -> None:
         self.file, self.against = file, against
         self.keys = Keys()
+        self.printed: dict[tuple[str, ...], bytes] = {}
         self.alterations: list[Alteration] = []
         self.outside: list[Outside] = []
         self.remarks: list[str] = []
@@ -229,12 +232,19 @@ class _Checking:
         """Tell whether the file is what our printer gives for its records, byte for byte."""
         if not sources or not self.file.pages:
             return False
-        try:
-            package = printed_again(sources, self.file.paper(self.file.pages[0]))
-            return to_pdf(package) == self.file.content
-        except NOT_PRINTED as error:
-            self.alterations.append(not_printed(error, sources))
-            return False
+        return self._printed(sources, self.file.pages[0]) == self.file.content
+
+    def _printed(self, sources: Sequence[Source], page: Any) -> bytes:
+        """Return the package printed again on the paper of a page; nothing where it cannot be."""
+        paper = self.file.paper(page)
+        key = (paper, *(source.record.digest for source in sources))
+        if key not in self.printed:
+            try:
+                self.printed[key] = to_pdf(printed_again(sources, paper))
+            except NOT_PRINTED as error:
+                self.alterations.append(not_printed(error, sources))
+                self.printed[key] = b""
+        return self.printed[key]
 
     # -- pages ---------------------------------------------------------------------------------
 
@@ -310,12 +320,10 @@ class _Checking:
     def _compare(self, own: _Own) -> None:
         if not own.sources:
             return
-        try:
-            package = printed_again(own.sources, self.file.paper(self.file.pages[own.pages[0]]))
-            fresh = _File(to_pdf(package))
-        except NOT_PRINTED as error:
-            self.alterations.append(not_printed(error, own.sources))
+        printed = self._printed(own.sources, self.file.pages[own.pages[0]])
+        if not printed:
             return
+        fresh = _File(printed)
         document = Document(self.keys)
         marks = [m for n, page in enumerate(fresh.pages) for m in document.marks(page, n)]
         compared = compare_pages(

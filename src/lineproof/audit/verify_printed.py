@@ -153,12 +153,12 @@ class _Pages:
             return False
         return _columns(ours) == _columns(theirs)
 
-    def _altered(
-        self, gap: Gap, what: str, where: Where, piece: Sequence[Mark] = ()
-    ) -> Alteration:
+    def _altered(self, gap: Gap, what: str, where: Where, piece: Sequence[Mark] = ()) -> Alteration:
         at = min(gap.first, len(self.ours) - 1)
         calc, label, entry_id = self.line[at] if self.line else ("", "", "")
-        marks = piece or self.theirs[gap.start : gap.end] or self.theirs[max(gap.start - 1, 0) :][:1]
+        marks = (
+            piece or self.theirs[gap.start : gap.end] or self.theirs[max(gap.start - 1, 0) :][:1]
+        )
         recorded = "" if piece else _row_text(self.ours, gap.first, gap.last)
         found = _text(piece) if piece else _row_text(self.theirs, gap.start, gap.end)
         page = self._number(marks[0]) if marks else 0
@@ -383,5 +383,3 @@ def _crosses(rule: Mark, text: Mark) -> bool:
     width = 0.35 * text.size * len(text.text)
     over = text.x < rule.x + rule.size and rule.x < text.x + width
     return over and 0.1 * text.size < rule.y - text.y < 0.6 * text.size
-
-

@@ -134,5 +134,3 @@ def lines_of(sources: Iterable[Source]) -> list[tuple[str, str, str]]:
         for part in source.record.parts
         for entry in part["entries"]
     ]
-
-

@@ -40,6 +40,7 @@ def parser() -> argparse.ArgumentParser:
     _add_recheck(commands)
     _add_lines(commands)
     _add_audit(commands)
+    _add_verify(commands)
     return made
 
 
@@ -109,6 +110,23 @@ def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
     )
     audit.add_argument("--calc", metavar="ID", help="which calc of a package of several")
     audit.add_argument("--json", action="store_true", help="print JSON instead of text")
+
+
+def _add_verify(commands: _Commands[argparse.ArgumentParser]) -> None:
+    verify = commands.add_parser(
+        "verify",
+        help="compare what a PDF or HTML package prints with the record inside it; runs nothing",
+        description="Recompute the record inside a package, print it again and compare what is "
+        "printed, mark for mark. Exit code 1 when something has been altered or the record has "
+        "been taken out, 2 when the file is no package.",
+    )
+    verify.add_argument("file", type=Path, metavar="FILE")
+    verify.add_argument(
+        "--against", type=Path, metavar="RECORD",
+        help="a record, a package or a notebook to compare with as well; a notebook proves the "
+        "prose too",
+    )  # fmt: skip
+    verify.add_argument("--json", action="store_true", help="print JSON instead of text")
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
