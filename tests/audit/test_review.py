@@ -187,7 +187,7 @@ def test_marks_on_what_rests_on_a_changed_input_turn_stale_and_name_it() -> None
     """By hand: d rests on h, r and the check on d; a rests on A_s and b only."""
     found = stale_marks(all_marked(beam()), beam(h="650 mm"))
     assert {each.mark.line: each.causes for each in found} == {
-        "data/h": (),
+        "data/h": ("data/h",),
         "flexure/d": ("data/h",),
         "flexure/r": ("data/h",),
         "flexure/enough": ("data/h",),
@@ -228,7 +228,7 @@ def test_marks_of_two_issues_name_their_own_causes() -> None:
     assert {each.digest for each in review.records} == {first.digest, second.digest}
     found = stale_marks(review, beam(b="450 mm", h="650 mm"))
     assert {each.mark.line: each.causes for each in found} == {
-        "data/h": (),
+        "data/h": ("data/h",),
         "flexure/r": ("data/h",),
     }
 

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import base64
+import hashlib
 import json
 import re
 import xml.etree.ElementTree as ET
@@ -35,7 +37,7 @@ def test_page_is_well_formed_and_the_same_every_time(page: str, whole_record: Re
 
 
 def test_page_loads_nothing(page: str) -> None:
-    """No address outside the file, no script that runs, fonts as data."""
+    """No address outside the file, no script that runs but our own module, fonts as data."""
     root = tree_of(page)
     links = [
         value
@@ -45,11 +47,30 @@ def test_page_loads_nothing(page: str) -> None:
     ]
 
     assert all(link.startswith("#") for link in links)
-    assert [s.get("type") for s in root.iter("script")] == ["application/vnd.lineproof.record+json"]
+    assert [s.get("type") for s in root.iter("script")] == [
+        "application/vnd.lineproof.record+json",
+        "module",
+    ]
     addresses = set(re.findall(r"https?://[^\"' )<]+", page))
     assert addresses <= {"http://www.w3.org/2000/svg"}
     assert all(url.startswith("data:font/woff2") for url in re.findall(r"url\(([^)]{0,30})", page))
     assert "@import" not in page
+
+
+def test_the_policy_of_the_page_allows_its_own_module_only(page: str) -> None:
+    """By its hash, as a browser takes it: over the text of the element, to the last sign."""
+    (policy,) = re.findall(r'Content-Security-Policy" content="([^"]+)"', page)
+    (module,) = re.findall(r'<script type="module">(.*?)</script>', page, re.DOTALL)
+    told = base64.b64encode(hashlib.sha256(module.encode()).digest()).decode()
+
+    assert policy.split("; ") == [
+        "default-src 'none'",
+        "style-src 'unsafe-inline'",
+        "font-src data:",
+        "img-src data:",
+        f"script-src 'sha256-{told}'",
+    ]
+    assert "import" not in re.findall(r"\b\w+\b", module)
 
 
 def test_record_inside_reads_back_equal(page: str, whole_record: Record) -> None:
@@ -134,7 +155,7 @@ def test_hostile_titles_come_out_literally(record: Record, title: str) -> None:
     assert title.startswith(heading.removesuffix("…"))
     assert len(heading) <= 300
     assert title in "".join(root.itertext())
-    assert len(list(root.iter("script"))) == 1
+    assert len(list(root.iter("script"))) == 2
     assert records_in_html(page) == [record]
 
 

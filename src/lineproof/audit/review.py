@@ -17,10 +17,6 @@ from lineproof.record.entry import GIVEN, LOOKUP, NOTE
 
 SCHEMA = "lineproof review 1"
 """How a review says what it is; another number is another form."""
-MIME = "application/vnd.lineproof.review+json"
-"""By which the review is known inside an HTML package."""
-SUFFIX = ".review.json"
-"""What stands behind the name of a calc in the name of its review."""
 
 
 class State(StrEnum):

@@ -95,7 +95,7 @@ def stale_marks(review: Review, record: Record) -> tuple[Stale, ...]:
         for digest, then in known.items()
     }
     found = [
-        _stale(mark, now, roots[mark.record])
+        _stale(mark, record, roots[mark.record])
         for mark in current
         if now.get(mark.line) != mark.digest
     ]
@@ -103,11 +103,13 @@ def stale_marks(review: Review, record: Record) -> tuple[Stale, ...]:
     return tuple(sorted(found, key=lambda each: order.get(each.mark.line, len(order))))
 
 
-def _stale(mark: Mark, now: Mapping[str, str], roots: Mapping[str, tuple[str, ...]]) -> Stale:
-    if mark.line not in now:
+def _stale(mark: Mark, record: Record, roots: Mapping[str, tuple[str, ...]]) -> Stale:
+    entry = record.entries.get(mark.line)
+    if entry is None:
         return Stale(mark, gone=True)
     causes = roots.get(mark.line, ())
-    return Stale(mark, () if causes == (mark.line,) else causes)
+    itself = causes == (mark.line,) and entry["kind"] not in INPUTS
+    return Stale(mark, () if itself else causes)
 
 
 def _roots(record: Record, changed: set[str]) -> dict[str, tuple[str, ...]]:

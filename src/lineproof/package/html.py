@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+import base64
+import hashlib
 from collections.abc import Mapping
 from typing import Any
 
 from lineproof.package.environment import html_environment
 from lineproof.package.figures import drawing
 from lineproof.package.model import Package
+from lineproof.package.reviewed import REVIEW_MIME, TALLY_HEADS
 from lineproof.record import MIME
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import MISSING_NOTE
@@ -25,6 +28,8 @@ _FACES = (
     ("400-italic", "italic", "400"),
     ("700-normal", "normal", "700"),
 )
+TOOLS = ("lines", "marks", "trace", "state", "panel", "start")
+"""The review tools, files of one module in the order in which they build on each other."""
 FONTS = tuple(
     (f"libertinus-serif-{piece}-{face}.woff2", style, weight)
     for piece in _PIECES
@@ -45,6 +50,7 @@ def to_html(package: Package) -> str:
     def picture(figure: Mapping[str, Any]) -> str:
         return Markup(drawing(figure).text)  # noqa: S704 - the drawing escapes its texts
 
+    tools = review_tools()
     template = html_environment().get_template("package.html.j2")
     return template.render(
         package=package,
@@ -52,10 +58,30 @@ def to_html(package: Package) -> str:
         fonts=FONTS,
         ranges=unicode_ranges,
         style=Markup(_style()),  # noqa: S704 - our own style sheet
+        tools=Markup(tools),  # noqa: S704 - our own module
+        tools_hash=_hash(tools),
         missing_note=MISSING_NOTE,
         record_mime=MIME,
+        review_mime=REVIEW_MIME,
+        tally_heads=TALLY_HEADS,
     )
 
 
+def review_tools() -> str:
+    """Return the module of the review tools; the page allows no script but this one.
+
+    It stands as character data, so that the page is well formed whatever signs it holds.
+    """
+    files = (folder("templates") / "review" / f"{name}.js" for name in TOOLS)
+    code = "\n".join(file.read_text(encoding="utf-8") for file in files)
+    return f"//<![CDATA[\n{code}//]]>"
+
+
+def _hash(script: str) -> str:
+    """Return by what the page's policy knows a script."""
+    return base64.b64encode(hashlib.sha256(script.encode()).digest()).decode("ascii")
+
+
 def _style() -> str:
-    return (folder("templates") / "package.css").read_text(encoding="utf-8")
+    sheets = ("package.css", "review/review.css")
+    return "\n".join((folder("templates") / name).read_text(encoding="utf-8") for name in sheets)

@@ -20,6 +20,7 @@ from lineproof.package.merged import (
 )
 from lineproof.package.prose import Mark, Prose, read_prose
 from lineproof.package.repeats import Worked
+from lineproof.package.reviewed import PrintedReview, checked_by
 from lineproof.package.summary import (
     Confirmation,
     Failure,
@@ -31,7 +32,7 @@ from lineproof.package.summary import (
     summary_rows,
 )
 from lineproof.record.plain_data import json_text
-from lineproof.typeset.glyphs import tree_has_missing
+from lineproof.typeset.glyphs import has_missing, tree_has_missing
 from lineproof.typeset.nodes import EQUALS, Math, row
 from lineproof.typeset.rows import PrintedRow, notation_of, printed_row
 from lineproof.typeset.values import symbol_math, symbol_of, value_math
@@ -68,6 +69,7 @@ class Package:
     notation: tuple[NotationRow, ...]
     missing_glyphs: bool
     cautions: tuple[str, ...] = CAUTIONS
+    reviews: tuple[PrintedReview, ...] = ()
 
     @property
     def failures(self) -> tuple[Failure, ...]:
@@ -111,21 +113,26 @@ def build_package(
     records: Sequence[Any],
     walks: Sequence[Walk | None] | None = None,
     marks: Mapping[str, Sequence[str]] | None = None,
+    reviews: Sequence[PrintedReview | None] = (),
 ) -> Package:
     """Build the package of one or several records of one project.
 
     ``records`` are records or their plain data; ``walks`` give each record's blocks (None: all
-    parts in order); ``marks`` are short notes printed beside the entry of that id.
+    parts in order); ``marks`` are short notes printed beside the entry of that id; ``reviews``
+    give the review of each record, None for none.
     Raises :class:`UserError` with all faults of prose and anchors at once.
     """
     data = [_plain_data(record) for record in records]
     if not data:
         raise UserError("package: no record; give at least one calc")
     faults = FaultList()
-    calcs = []
+    calcs, reviewed = [], []
     for place, (record, prefix) in enumerate(zip(data, _prefixes(data), strict=True)):
         walk = walks[place] if walks is not None else None
-        calcs.append(_Builder(record, prefix, marks or {}, faults).calc(walk))
+        review = reviews[place] if reviews else None
+        beside = _beside(marks or {}, review.notes if review is not None else {})
+        calcs.append(_Builder(record, prefix, beside, faults).calc(walk))
+        reviewed += [replace(review, anchor=prefix)] if review is not None else []
     facts = project_facts(
         data[0]["project"], data[0]["codes"], [each["calc"]["id"] for each in data]
     )
@@ -133,11 +140,20 @@ def build_package(
     faults.raise_if_any()
     return Package(
         title=calcs[0].title if len(calcs) == 1 else facts.name,
-        facts=facts,
+        facts=checked_by(facts, reviews),
         calcs=tuple(calcs),
         notation=notation_rows(data),
-        missing_glyphs=any(tree_has_missing(record) for record in data),
+        missing_glyphs=any(tree_has_missing(record) for record in data)
+        or any(has_missing(review.text) for review in reviewed),
+        reviews=tuple(reviewed),
     )
+
+
+def _beside(
+    marks: Mapping[str, Sequence[str]], notes: Mapping[str, Sequence[str]]
+) -> dict[str, tuple[str, ...]]:
+    """Return what stands beside each line: marks given, then notes of the review."""
+    return {line: (*marks.get(line, ()), *notes.get(line, ())) for line in [*marks, *notes]}
 
 
 def _check_status(status: str, calcs: Sequence[Calc], faults: FaultList) -> None:

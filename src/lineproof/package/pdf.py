@@ -15,6 +15,7 @@ from lineproof.errors import UserError
 from lineproof.package.environment import Interned, Verbatim, typst_environment
 from lineproof.package.figures import drawing, paper_width
 from lineproof.package.model import Package
+from lineproof.package.reviewed import REVIEW_MIME, REVIEW_SUFFIX, TALLY_HEADS
 from lineproof.record import MIME
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import MISSING_NOTE
@@ -49,6 +50,9 @@ def typst_source(package: Package) -> tuple[str, str]:
         verbatim=Verbatim,
         missing_note=MISSING_NOTE,
         record_mime=MIME,
+        review_mime=REVIEW_MIME,
+        review_suffix=REVIEW_SUFFIX,
+        tally_heads=TALLY_HEADS,
         year=str(package.facts.date.year),
         month=str(package.facts.date.month),
         day=str(package.facts.date.day),

@@ -11,10 +11,12 @@ from contextlib import contextmanager
 from typing import Any
 
 from lineproof.errors import UserError
+from lineproof.package.reviewed import REVIEW_MIME, REVIEW_SUFFIX
 from lineproof.record import LARGEST_RECORD, MIME
 
 _TAIL = 65_536
 _OPENED = re.compile(rf'<script type="{re.escape(MIME)}"[^<>]*>', re.IGNORECASE)
+_REVIEW = re.compile(rf'<script type="{re.escape(REVIEW_MIME)}"[^<>]*>', re.IGNORECASE)
 _CLOSED = re.compile(r"</script>", re.IGNORECASE)
 _SUFFIX = ".lineproof.json"
 _PLACE = re.compile(r"Record (\d{1,4}) of ")
@@ -28,10 +30,21 @@ def records_in_html(text: str) -> list[dict[str, Any]]:
     return _each_once(found)
 
 
-def _scripts(text: str) -> Iterator[str]:
+def reviews_in_html(text: str) -> list[str]:
+    """Return the texts of the reviews inside an HTML package, in order; often none."""
+    return list(_scripts(text, _REVIEW))
+
+
+def reviews_in_pdf(content: bytes) -> list[str]:
+    """Return the texts of the reviews attached to a PDF package; raises :class:`UserError`."""
+    found = _attachments(content)
+    return [data.decode(errors="replace") for name, data in found if name.endswith(REVIEW_SUFFIX)]
+
+
+def _scripts(text: str, opening: re.Pattern[str] = _OPENED) -> Iterator[str]:
     """Yield what stands in the record scripts; one pass, whatever the page holds."""
     place = 0
-    while (opened := _OPENED.search(text, place)) is not None:
+    while (opened := opening.search(text, place)) is not None:
         closed = _CLOSED.search(text, opened.end())
         if closed is None:
             raise UserError("the record in this HTML file is cut short; give the whole file")
