@@ -14,7 +14,7 @@ _SHARP = 0.02
 """Half width over value from which an interval is too wide to tell one factor from another."""
 _NEAR_ONE = 3.0
 """Factors nearer to one, such as kip.ft for kN.m, are too easily met by chance."""
-_COARSE = (2, 5, 10, 20, 25, 50, 100)
+_COARSE = (5, 10, 25, 50, 100)
 """Steps in units of the last digit to which a practitioner rounds lengths and areas."""
 _COARSE_ELSEWHERE = (10,)
 _BUILT = ("length", "area")

@@ -1,0 +1,262 @@
+"""Judging: every verdict on a beam worked by hand (hand.py), and honest rounding is no error."""
+
+from __future__ import annotations
+
+from collections.abc import Container, Mapping
+from functools import cache
+from typing import Any
+
+import pytest
+from hypothesis import HealthCheck, given, settings
+from hypothesis import strategies as st
+from tests.audit.hand import beam, judged, sheet_of, typed
+from tests.beams.continuous import flow
+from tests.beams.gallery import EDGE, RECTANGULAR, record_of
+
+from lineproof import beams as procedures
+from lineproof.audit.data import Claim, Interval, Slip, Verdict
+from lineproof.audit.graph import Graph
+from lineproof.audit.judge import judge
+from lineproof.quantity.digits import rounded_text
+from lineproof.quantity.units import internal_factor
+from lineproof.record import Record
+
+SOUND = {
+    "given/h": "600", "beam/d": "539", "beam/A_s": "1200", "beam/a": "65.0",
+    "strength/M_r": "207", "strength/M_f": "180",
+}  # fmt: skip
+"""d 538.95, a 64.98, M_r 206.64, M_f 180: each as somebody writes it."""
+
+
+@pytest.fixture(scope="module")
+def record() -> Record:
+    return beam()
+
+
+def verdicts(record: Record, claims: Mapping[str, str]) -> dict[str, Verdict]:
+    return {entry_id: each.verdict for entry_id, each in judged(record, claims).items()}
+
+
+# -- what agrees -------------------------------------------------------------------------------
+
+
+def test_rounded_values_agree(record: Record) -> None:
+    assert set(verdicts(record, SOUND).values()) == {Verdict.AGREES}
+
+
+def test_worked_from_rounded_values_agrees(record: Record) -> None:
+    """With d = 540 (two digits, typed 5.4e2): M_r = 408 000 x (540 - 32.4893) = 207.1; right 206.6.
+
+    d "54 cm" stands for 535 to 545, so M_r may be 205.0 to 209.1; "207.1" follows from it.
+    """
+    said = judged(record, {"beam/d": "54 cm", "strength/M_r": "207.1"})
+    assert [each.verdict for each in said.values()] == [Verdict.AGREES, Verdict.AGREES]
+    follows = said["strength/M_r"].follows
+    assert follows.low == pytest.approx(408_000 * (535 - 32.48925), rel=1e-4)
+    assert follows.high == pytest.approx(408_000 * (545 - 32.48925), rel=1e-4)
+
+
+def test_values_in_other_units_agree(record: Record) -> None:
+    """206.636 kN.m = 152.41 kip.ft; 538.95 mm = 21.218 in."""
+    said = verdicts(record, {"beam/d": "21.22 in", "strength/M_r": "152.4 kip.ft"})
+    assert set(said.values()) == {Verdict.AGREES}
+
+
+def test_a_line_that_nobody_claimed_is_told(record: Record) -> None:
+    graph = Graph(record)
+    said = {j.id: j for j in judge(graph, [typed(graph, "beam/d", "539")])}
+    assert said["beam/a"].verdict is Verdict.NOT_CLAIMED
+    assert said["beam/a"].claim is None
+    assert set(said) == {node.id for node in graph if node.has_value}
+
+
+def test_right_although_a_value_above_is_wrong(record: Record) -> None:
+    """With d = 500 as claimed M_r would be 190.7; the claim of 206.6 is right all the same."""
+    said = judged(record, {"beam/d": "500", "strength/M_r": "206.6"})
+    assert said["beam/d"].verdict is Verdict.ORIGIN
+    assert said["strength/M_r"].verdict is Verdict.AGREES
+    assert "does not follow" in said["strength/M_r"].note
+
+
+# -- inputs, origins, carried ------------------------------------------------------------------
+
+
+def test_another_input_and_what_carries_it(record: Record) -> None:
+    """h = 650: d = 588.95, M_r = 408 000 x 556.461 = 227.04; b, a and M_f do not rest on h."""
+    said = judged(record, SOUND | {"given/h": "650", "beam/d": "589", "strength/M_r": "227"})
+    assert said["given/h"].verdict is Verdict.INPUT
+    assert "600.0 mm" in said["given/h"].note
+    for entry_id in ("beam/d", "strength/M_r"):
+        assert said[entry_id].verdict is Verdict.CARRIED
+        assert said[entry_id].causes == ("given/h",)
+    assert said["beam/a"].verdict is said["strength/M_f"].verdict is Verdict.AGREES
+
+
+def test_an_origin_and_what_carries_it(record: Record) -> None:
+    """phi_s left out of a: 480 000/6279 = 76.445; M_r = 408 000 x (538.95 - 38.22) = 204.30."""
+    said = judged(record, SOUND | {"beam/a": "76.4", "strength/M_r": "204.3"})
+    assert said["beam/a"].verdict is Verdict.ORIGIN
+    assert said["beam/a"].follows.holds(408_000 / 6279)
+    assert said["strength/M_r"].verdict is Verdict.CARRIED
+    assert said["strength/M_r"].causes == ("beam/a",)
+    assert "a (" in said["strength/M_r"].note
+
+
+def test_two_origins_of_one_line(record: Record) -> None:
+    """d = 600 and a = 76.4: M_r = 408 000 x (600 - 38.2) = 229.2 kN.m."""
+    said = judged(record, SOUND | {"beam/d": "600", "beam/a": "76.4", "strength/M_r": "229.2"})
+    assert said["strength/M_r"].causes == ("beam/d", "beam/a")
+
+
+def test_an_error_passes_through_lines_that_nobody_claimed(record: Record) -> None:
+    """A_s = 900: a = 48.734, which nobody claimed; M_r = 306 000 x (538.95 - 24.367) = 157.46."""
+    said = judged(record, {"beam/A_s": "900", "strength/M_r": "157.5"})
+    assert said["beam/A_s"].verdict is Verdict.ORIGIN
+    assert said["strength/M_r"].verdict is Verdict.CARRIED
+    assert said["strength/M_r"].causes == ("beam/A_s",)
+
+
+def test_a_small_error_beyond_rounding_is_not_hidden(record: Record) -> None:
+    """M_r 206.636: 206.6 agrees; 206.9 is 0.13 % off and is no rounding of it."""
+    exact = {"beam/d": "538.95", "beam/a": "64.98"}
+    assert verdicts(record, exact | {"strength/M_r": "206.6"})["strength/M_r"] is Verdict.AGREES
+    assert verdicts(record, exact | {"strength/M_r": "206.9"})["strength/M_r"] is Verdict.ORIGIN
+
+
+def test_the_slip_finder_is_asked_for_origins_alone(record: Record) -> None:
+    asked: list[tuple[str, Interval, bool]] = []
+
+    def find(
+        graph: Graph, entry_id: str, used: Mapping[str, Interval], claim: Claim,
+        claimed: Container[str],
+    ) -> tuple[Slip, ...]:  # fmt: skip
+        asked.append((entry_id, used["beam/d"], "beam/d" in claimed))
+        return (Slip("test", f"{graph.record.calc_id} {claim.typed}", claim.value, 1.0),)
+
+    said = judged(record, SOUND | {"beam/a": "76.4", "strength/M_r": "204.3"}, find)
+    assert asked == [("beam/a", Interval(538.5, 539.5), True)]
+    assert said["beam/a"].slips[0].sentence == "H1 76.4"
+    assert said["strength/M_r"].slips == ()
+
+
+# -- units, other ways, roundings --------------------------------------------------------------
+
+
+@pytest.mark.parametrize(
+    ("claims", "line", "words"),
+    [
+        ({"strength/M_f": "180 N.mm"}, "strength/M_f", "N.mm in place of kN.m"),
+        ({"strength/M_r": "20.7"}, "strength/M_r", "10 times too small"),
+        ({"beam/d": "0.539"}, "beam/d", "mm in place of m"),
+        ({"beam/d": "21.2"}, "beam/d", "mm in place of in"),
+        ({"given/f_c": "30 kPa"}, "given/f_c", "kPa in place of MPa"),
+    ],
+)
+def test_slips_of_units(record: Record, claims: dict[str, str], line: str, words: str) -> None:
+    said = judged(record, claims)[line]
+    assert said.verdict is Verdict.UNIT
+    assert words in said.slips[0].sentence
+
+
+def test_roundings_and_their_direction(record: Record) -> None:
+    """d 538.95: to 535 M_r falls, to 540 it rises; M_f 180 to 190 asks for more than needed."""
+    down = judged(record, {"beam/d": "535"})["beam/d"]
+    up = judged(record, {"beam/d": "540"})["beam/d"]
+    assert (down.verdict, up.verdict) == (Verdict.SAFE_ROUNDING, Verdict.UNSAFE_ROUNDING)
+    assert "rounded down to a step of 5 mm: conservative" in down.note
+    assert "rounded up to a step of 5 mm: not conservative" in up.note
+
+
+def test_moments_are_rounded_to_one_digit_less_alone(record: Record) -> None:
+    """M_r 206.64 to 210 writes a digit less, and promises more; 205 is no rounding of a moment."""
+    assert verdicts(record, {"strength/M_r": "210"})["strength/M_r"] is Verdict.UNSAFE_ROUNDING
+    assert verdicts(record, {"strength/M_r": "205"})["strength/M_r"] is Verdict.ORIGIN
+    assert verdicts(record, {"strength/M_r": "206"})["strength/M_r"] is Verdict.SAFE_ROUNDING
+
+
+def test_what_follows_from_a_safe_rounding_agrees(record: Record) -> None:
+    """With d = 535 M_r = 408 000 x (535 - 32.489) = 205.02."""
+    said = judged(record, {"beam/d": "535", "strength/M_r": "205.0"})["strength/M_r"]
+    assert said.verdict is Verdict.AGREES
+    assert said.causes == ("beam/d",)
+
+
+# -- decisions, values that cannot be worked ---------------------------------------------------
+
+
+def test_a_decision_that_turns_is_told() -> None:
+    """The record goes with a = 65 <= 100; with a = 110 claimed it would go the other way.
+
+    M_r = 408 000 x (538.95 - 55) = 197.4 by the recorded formula; 190 comes from the other branch.
+    """
+    record = beam("a <= h_f")
+    said = judged(record, {"beam/a": "110", "strength/M_r": "190.3"})
+    assert said["beam/a"].verdict is Verdict.ORIGIN
+    assert said["strength/M_r"].verdict is Verdict.UNKNOWN
+    assert "a <= h_f" in said["strength/M_r"].note
+    assert said["strength/M_r"].causes == ("beam/a",)
+    followed = judged(record, {"beam/a": "110", "strength/M_r": "197.4"})["strength/M_r"]
+    assert followed.verdict is Verdict.CARRIED
+
+
+def test_a_line_that_cannot_be_worked_with_the_claims() -> None:
+    """x = sqrt(600 - 538.95) = 7.81; with d = 650 claimed the root has none."""
+    lines = {"d = h - c_c - d_bs - d_b/2": "mm", "x = sqrt((h - d)*b)": "mm"}
+    record = sheet_of(lines).close()
+    said = judged(record, {"beam/d": "650", "beam/x": "180"})["beam/x"]
+    assert said.verdict is Verdict.UNKNOWN
+    assert "cannot be worked" in said.note
+
+
+def test_values_that_stand_in_several_parts_change_together() -> None:
+    """w = q b in two parts: 15 claimed in one (right 12); M = 15 x 36/8 = 67.5 in the other."""
+    sheet = sheet_of({}, {"q": "4 kPa", "b_tr": "3 m", "l": "6 m"})
+    for key in ("one", "two"):
+        with sheet.part(key, f"Part {key}"):
+            sheet.line("w = q*b_tr", unit="kN/m")
+            sheet.line("M = w*l**2/8", unit="kN.m")
+    record = sheet.close()
+    said = judged(record, {"one/w": "15.0", "two/M": "67.5"})
+    assert said["one/w"].verdict is Verdict.ORIGIN
+    assert said["two/M"].verdict is Verdict.CARRIED
+    assert said["two/M"].causes == ("one/w",)
+    alone = judged(record, {"one/w": "15.0", "two/w": "12.0", "two/M": "67.5"})
+    assert alone["two/M"].verdict is Verdict.ORIGIN
+
+
+# -- honest rounding is never an error ---------------------------------------------------------
+
+
+@cache
+def whole(name: str) -> Graph:
+    """Return the graph of a whole beam of the flow."""
+    assert procedures  # found values need their procedures
+    makers: dict[str, Any] = {
+        "three spans": flow.record_of,
+        "edge": lambda: record_of(**EDGE),
+        "rectangular": lambda: record_of(**RECTANGULAR),
+        "deep": lambda: record_of(h="900 mm", span="11 m", f_c="45 MPa"),
+    }
+    return Graph(makers[name]())
+
+
+@settings(
+    max_examples=40, deadline=None, derandomize=True, database=None,
+    suppress_health_check=list(HealthCheck),
+)  # fmt: skip
+@given(
+    name=st.sampled_from(["three spans", "edge", "rectangular", "deep"]),
+    digits=st.integers(3, 6),
+    part=st.sampled_from([1.0, 0.5, 0.1, 0.02]),
+    draw=st.randoms(use_true_random=False),
+)
+def test_a_records_own_values_rounded_agree(name: str, digits: int, part: float, draw: Any) -> None:
+    """Any lines of a beam, its own values rounded to three digits or more: nothing but agrees."""
+    graph = whole(name)
+    claims = []
+    for node in graph:
+        if node.has_value and draw.random() <= part:
+            text = rounded_text(node.stored / internal_factor(node.unit), digits)
+            claims.append(typed(graph, node.id, text))
+    wrong = [j for j in judge(graph, claims) if j.claim and j.verdict is not Verdict.AGREES]
+    assert wrong == []
