@@ -10,15 +10,14 @@ from typing import NamedTuple
 from lineproof.audit.slip_constants import BARS, BY_SYMBOL, GRADES, ROWS
 from lineproof.audit.slip_digits import changed, swapped, written
 from lineproof.audit.slip_edits import Edit, Line, words_of
-from lineproof.audit.slip_kinship import PAIRS, SERVICE
+from lineproof.audit.slip_kinship import PAIRS, PARTNERS, SERVICE
 from lineproof.audit.slip_scope import LOADS, is_next
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import UNITS, internal_factor
 from lineproof.record.entry import GIVEN, LOOKUP
 
 FACTORS_OF_LOADS = (1.25, 1.5, 1.4)
-LETTERS = 1
-PENALTY_OF_UNEQUAL_LETTER = 0.5
+NEAR_ONE = 1e-6
 UNITS_BY_KIND: dict[str, tuple[tuple[float, str, str], ...]] = {
     "mm": ((1e-3, "unit", "mm in m"), (1e3, "unit", "m in mm"), (10, "unit", "cm in mm"),
            (0.1, "unit", "mm in cm"), (25.4, "other unit", "inches for mm"),
@@ -42,6 +41,18 @@ UNITS_BY_KIND: dict[str, tuple[tuple[float, str, str], ...]] = {
     "": ((1e3, "unit", "the power of ten of a strain"), (1e-3, "unit", "the power of ten")),
 }  # fmt: skip
 """By internal unit: the factor of a slip of units, its family, and what was taken for what."""
+
+
+POWERS = (1e3, 1e-3, 1e6, 1e-6)
+
+
+def ways_of_units(unit: str) -> Iterator[tuple[float, str, str]]:
+    """Give the slips of units for an internal unit: the usual ones, then plain powers of ten."""
+    usual = UNITS_BY_KIND.get(unit, ())
+    yield from usual
+    for power in POWERS if unit else ():
+        if all(abs(power / factor - 1) > NEAR_ONE for factor, _, _ in usual):
+            yield power, "other unit", f"10^{round(math.log10(power))} too much"
 
 
 class Other(NamedTuple):
@@ -104,8 +115,10 @@ def _quantities(line: Line, target: str, name: str) -> Iterator[Other]:
     unit, own = scope.units[target], scope.symbols[target]
     seen = {target, line.node.id}
     near = [*scope.near(line.node.part, unit), *scope.kin(target)]
+    for partners in {PARTNERS.get(scope.stems[target], ()), PARTNERS.get(name, ())}:
+        near += scope.same_span(line.node.part, partners)
     for other in near:
-        if other in seen or scope.order[other] > scope.order[line.node.id] + 40:
+        if other in seen or scope.units[other] != unit:
             continue
         seen.add(other)
         family, far = _kinship(line, target, other, name)
@@ -202,6 +215,8 @@ def _areas(
     if symbol in ("A_v", "A_tr", "A_h"):
         yield other("legs", value / 2, ", half of the legs")
         yield other("legs", value * 2, ", twice the legs")
+        yield other("diameter", value * 4, ", the diameter for the radius")
+        yield other("diameter", value / 4, ", the radius for the diameter")
     elif symbol in ("A_t", "A_bs"):
         yield other("legs", value * 2, ", two legs")
     else:
@@ -275,7 +290,7 @@ def _units(line: Line, target: str, name: str) -> Iterator[Other]:
     value, half = line.pairs[target]
     unit = line.scope.units[target]
     is_count = line.scope.symbols[target].startswith("n_")
-    for factor, family, why in UNITS_BY_KIND.get(unit, ()):
+    for factor, family, why in ways_of_units(unit):
         if unit == "" and (is_count or abs(value) > 0.05):  # noqa: PLR2004 - strains are small
             continue
         words = partial("{} in the wrong unit: {}".format, words_of(line.scope, target, name), why)

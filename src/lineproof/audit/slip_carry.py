@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Container, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from lineproof.audit.graph import Node
+from lineproof.audit.slip_edits import Line
 from lineproof.audit.slip_scope import Pairs, Scope
 from lineproof.audit.slip_tree import FAILURES, Places, real
 from lineproof.errors import UserError
@@ -14,18 +15,28 @@ STRAIGHT = 1e-9
 """A way bent by less than this part of its values counts as straight."""
 MOST_LINES = 40
 """So many unclaimed lines above a claim are searched, the nearest first."""
+MOST_FOUND = 2000
+"""So many found values are kept while one table of claims is searched."""
+
+STRIDE = 6
+"""Of the edits above a claim, so many lie between two that are worked at first."""
+
+Way = Callable[[float], float]
+"""The claim's value as a function of a line above; raises where there is no value."""
 
 
 @dataclass(frozen=True, slots=True)
 class Reach:
     """The unclaimed lines above a claim, nearest first, each with its distance; and its leaves.
 
-    ``leaves`` are givens and looked-up values that more than one of these lines use.
+    ``leaves`` are givens and looked-up values that more than one of these lines use; ``order``
+    holds the lines and the claim in the order of the record.
     """
 
     target: str
     lines: dict[str, int]
     leaves: dict[str, int]
+    order: tuple[str, ...]
 
 
 def reach_of(scope: Scope, target: str, claimed: Container[str]) -> Reach:
@@ -50,43 +61,111 @@ def reach_of(scope: Scope, target: str, claimed: Container[str]) -> Reach:
     del lines[target]
     kept = dict(list(lines.items())[:MOST_LINES])
     leaves = {entry_id: 1 for entry_id, times in uses.items() if times > 1}
-    return Reach(target, kept, leaves)
-
-
-def carry(scope: Scope, pairs: Pairs, reach: Reach, changed: str) -> Onward | None:
-    """Return the claim's value as a function of one unclaimed line or leaf above it.
-
-    None where the way there cannot be worked quickly. It raises where there is no value.
-    """
-    graph = scope.graph
-    touched = {changed}
-    steps: list[Step] = []
-    within = {*reach.lines, reach.target}
-    for entry_id in sorted(within, key=scope.order.__getitem__):
-        node = graph[entry_id]
-        if entry_id == changed or touched.isdisjoint(node.args.values()):
-            continue
-        touched.add(entry_id)
-        steps.append(_step(scope, pairs, node, touched))
-    if not steps or steps[-1].entry_id != reach.target:
-        return None
-    onward = _composed(steps, changed)
-    slow = any(graph[step.entry_id].tree is None for step in steps)
-    if not slow:
-        return Onward(onward, onward)
-    straight = _straight(onward, pairs[changed][0])
-    return None if straight is None else Onward(straight, onward)
+    order = sorted([target, *kept], key=scope.order.__getitem__)
+    return Reach(target, kept, leaves, tuple(order))
 
 
 @dataclass(frozen=True, slots=True)
 class Onward:
     """The way on to the claim: ``quick`` to look for fits, ``exact`` to work them out."""
 
-    quick: Callable[[float], float]
-    exact: Callable[[float], float]
+    quick: Way
+    exact: Way
 
 
-def _straight(onward: Callable[[float], float], here: float) -> Callable[[float], float] | None:
+@dataclass(frozen=True, slots=True)
+class Step:
+    """One line on the way: how its value follows from those that have changed before."""
+
+    entry_id: str
+    work: Callable[[dict[str, float]], float]
+
+
+@dataclass(frozen=True)
+class Carrier:
+    """Carries changed values on; lines and found values worked once are kept for the next claim."""
+
+    scope: Scope
+    pairs: Pairs
+    line: Callable[[str], Line | None]
+    kept: dict[tuple[str, tuple[float, ...]], float] = field(default_factory=dict)
+
+    def onward(self, reach: Reach, changed: str) -> Onward | None:
+        """Return the way from one unclaimed line or leaf on to the claim.
+
+        None where the way cannot be worked, or not quickly.
+        """
+        touched = {changed}
+        steps: list[Step] = []
+        for entry_id in reach.order:
+            node = self.scope.graph[entry_id]
+            if entry_id == changed or touched.isdisjoint(node.args.values()):
+                continue
+            step = self._step(node, touched)
+            if step is None:
+                return None
+            touched.add(entry_id)
+            steps.append(step)
+        if not steps or steps[-1].entry_id != reach.target:
+            return None
+        exact = _composed(steps, changed)
+        if all(self.scope.graph[step.entry_id].tree is not None for step in steps):
+            return Onward(exact, exact)
+        straight = _straight(exact, self.pairs[changed][0])
+        return None if straight is None else Onward(straight, exact)
+
+    def _step(self, node: Node, touched: set[str]) -> Step | None:
+        moving = [(name, target) for name, target in node.args.items() if target in touched]
+        if node.tree is None:
+            named = {name: self.pairs[target][0] for name, target in node.args.items()}
+            return Step(node.id, lambda now: self._found(node, named, moving, now))
+        line = self.line(node.id)
+        if line is None:
+            return None
+        places = line.places
+        at = [(k, target) for name, target in moving for k in places.uses(name)]
+        if len(at) == 1:
+            only, source = at[0]
+            return Step(node.id, lambda now: places.with_place(only, now[source]))
+        return Step(node.id, _with_many(places, at))
+
+    def _found(
+        self,
+        node: Node,
+        named: dict[str, float],
+        moving: Sequence[tuple[str, str]],
+        now: dict[str, float],
+    ) -> float:
+        key = (node.id, tuple(now[target] for _, target in moving))
+        if key not in self.kept:
+            if len(self.kept) > MOST_FOUND:
+                self.kept.clear()
+            try:
+                changed = named | {name: now[target] for name, target in moving}
+                self.kept[key] = real(node.compute(changed))
+            except UserError as error:
+                raise ValueError(str(error)) from error
+        return self.kept[key]
+
+
+def _with_many(
+    places: Places, at: Sequence[tuple[int, str]]
+) -> Callable[[dict[str, float]], float]:
+    over = places.over(tuple(k for k, _ in at))
+    return lambda now: places.with_values([(k, now[target]) for k, target in at], over)
+
+
+def _composed(steps: Sequence[Step], changed: str) -> Way:
+    def carried(value: float) -> float:
+        now = {changed: value}
+        for step in steps:
+            now[step.entry_id] = step.work(now)
+        return now[steps[-1].entry_id]
+
+    return carried
+
+
+def _straight(onward: Way, here: float) -> Way | None:
     """Return a way that runs through a found value as a straight line, if it is one.
 
     Support moments are proportional to loads, and a run of the procedure costs a thousand lines.
@@ -102,54 +181,38 @@ def _straight(onward: Callable[[float], float], here: float) -> Callable[[float]
     return lambda value: low + slope * (value - here)
 
 
-@dataclass(frozen=True, slots=True)
-class Step:
-    """One line on the way: how its value follows from those that have changed before."""
-
-    entry_id: str
-    work: Callable[[dict[str, float]], float]
-
-
-def _step(scope: Scope, pairs: Pairs, node: Node, touched: set[str]) -> Step:
-    named = {name: pairs[target][0] for name, target in node.args.items()}
-    moving = [(name, target) for name, target in node.args.items() if target in touched]
-    if node.tree is None:
-        return Step(node.id, lambda now: _found(node, named, moving, now))
-    places = Places(scope.places(node), {name: pairs[t] for name, t in node.args.items()})
-    at = [(k, target) for name, target in moving for k in places.uses(name)]
-    if len(at) == 1:
-        only, source = at[0]
-        return Step(node.id, lambda now: places.with_place(only, now[source]))
-    return Step(
-        node.id, lambda now: places.with_places({k: (now[target], 0.0) for k, target in at})[0]
-    )
-
-
-def _found(
-    node: Node,
-    named: dict[str, float],
-    moving: Sequence[tuple[str, str]],
-    now: dict[str, float],
-) -> float:
+def worked_or_none(way: Way, value: float) -> float | None:
+    """Return what a way gives, or None where it gives no real number."""
     try:
-        return real(node.compute(named | {name: now[target] for name, target in moving}))
-    except UserError as error:
-        raise ValueError(str(error)) from error
-
-
-def _composed(steps: Sequence[Step], changed: str) -> Callable[[float], float]:
-    def carried(value: float) -> float:
-        now = {changed: value}
-        for step in steps:
-            now[step.entry_id] = step.work(now)
-        return now[steps[-1].entry_id]
-
-    return carried
-
-
-def carried_or_none(function: Callable[[float], float], value: float) -> float | None:
-    """Return what a function gives, or None where it gives no real number."""
-    try:
-        return function(value)
+        return way(value)
     except FAILURES:
         return None
+
+
+def fitting(way: Way, values: Sequence[float], low: float, high: float) -> list[int]:
+    """Return which of the sorted values a way carries between low and high.
+
+    Works every few values and those between only where the target may lie there; what turns back
+    sharply between two of its values may be missed.
+    """
+    found: list[int] = []
+    last = len(values) - 1
+    before: float | None = None
+    for at in range(0, last + STRIDE, STRIDE):
+        here = worked_or_none(way, values[min(at, last)])
+        if at and _may_lie_between(before, here, low, high):
+            for inner in range(at - STRIDE + 1, min(at, last)):
+                between = worked_or_none(way, values[inner])
+                if between is not None and low <= between <= high:
+                    found.append(inner)
+        if here is not None and low <= here <= high:
+            found.append(min(at, last))
+        before = here
+    return list(dict.fromkeys(found))
+
+
+def _may_lie_between(first: float | None, second: float | None, low: float, high: float) -> bool:
+    if first is None or second is None:
+        return True
+    room = abs(second - first)
+    return min(first, second) - room <= high and max(first, second) + room >= low

@@ -34,9 +34,10 @@ def swapped(number: str) -> Iterator[str]:
 def changed(number: str) -> Iterator[str]:
     """Give a number with one digit changed, in every way."""
     at = _places(number)
-    # The zeros behind a whole number hold the place; nobody mistypes them one by one.
-    kept = at if "." in number else at[: len(number.rstrip("0").lstrip("-")) or 1]
-    for place in kept:
+    if "." not in number:
+        # Zeros behind the third digit hold the place; nobody mistypes them one by one.
+        at = at[: max(len(number.rstrip("0").lstrip("-")), 3)]
+    for place in at:
         for digit in _DIGITS:
             if digit != number[place]:
                 yield number[:place] + digit + number[place + 1 :]

@@ -26,6 +26,12 @@ PAIRS = frozenset(
 )
 """Pairs of symbols, without the number of their place, that are mixed up in practice."""
 
+PARTNERS: dict[str, tuple[str, ...]] = {
+    symbol: tuple(sorted({other for pair in PAIRS if symbol in pair for other in pair - {symbol}}))
+    for symbol in sorted({one for pair in PAIRS for one in pair})
+}
+"""By symbol, those that it is taken for."""
+
 SERVICE: dict[str, tuple[str, ...]] = {
     "w_s": ("w_f",), "M_m": ("M_f",), "M_a": ("M_f",), "M_h": ("M_f",), "M_h1": ("M_f",),
     "M_h2": ("M_f",), "w_f": ("w_s",), "M_f": ("M_m", "M_h1", "M_h2"),

@@ -15,6 +15,10 @@ MOST = 8
 """So many slips of one line are told."""
 LEAST_LIKELY = 2e-4
 """Below this share a fit is as good as chance, and is not told."""
+SELECTED = frozenset(("pair", "edition", "factor"))
+"""Families of edits that are each known from practice: each keeps more than an even part."""
+AGAIN = 0.5
+"""Each further slip of a kind counts so much less than the one before."""
 _SAME = 1e-9
 
 
@@ -36,7 +40,10 @@ def shares(edits: Sequence[Edit]) -> dict[str, float]:
     different = Counter(
         family for family, _ in {(edit.family, f"{edit.value:.9g}") for edit in edits}
     )
-    return {family: FAMILIES[family].share / count for family, count in different.items()}
+    return {
+        family: FAMILIES[family].share / count ** (0.5 if family in SELECTED else 1.0)
+        for family, count in different.items()
+    }
 
 
 def likely(fit: Fit, claim: Claim) -> float:
@@ -57,21 +64,29 @@ def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
         ((likely(fit, claim), order, fit) for order, fit in enumerate(fits)),
         key=lambda row: (-row[0], row[1]),
     )
-    told: list[Slip] = []
+    groups: list[tuple[float, Fit, list[str]]] = []
     for share, _, fit in ordered:
         kind = FAMILIES[fit.edit.family].kind
-        same = next((k for k, slip in enumerate(told) if _equal(slip.value, fit.value)), None)
-        if same is not None:
-            told[same] = _also(told[same], kind)
-        elif share >= LEAST_LIKELY and len(told) < MOST:
-            told.append(Slip(kind, _sentence(fit, claim), fit.value, share))
-    return tuple(told)
+        same = next((kinds for _, other, kinds in groups if _equal(other.value, fit.value)), None)
+        if same is None:
+            groups.append((share, fit, [kind]))
+        elif kind not in same:
+            same.append(kind)
+    return tuple(
+        Slip(kinds[0], _sentence(fit, claim), fit.value, share, tuple(kinds[1:]))
+        for share, fit, kinds in _varied(groups)[:MOST]
+        if share >= LEAST_LIKELY
+    )
 
 
-def _also(slip: Slip, kind: str) -> Slip:
-    if kind == slip.kind or kind in slip.also:
-        return slip
-    return Slip(slip.kind, slip.sentence, slip.value, slip.likely, (*slip.also, kind))
+def _varied(groups: list[tuple[float, Fit, list[str]]]) -> list[tuple[float, Fit, list[str]]]:
+    """Order slips so that many of one kind, nearly alike, do not push out the other kinds."""
+    met: Counter[str] = Counter()
+    weighed = []
+    for share, fit, kinds in groups:
+        weighed.append((share * AGAIN ** met[kinds[0]], fit, kinds))
+        met[kinds[0]] += 1
+    return sorted(weighed, key=lambda row: -row[0])
 
 
 def _equal(first: float, second: float) -> bool:

@@ -171,15 +171,19 @@ class Places:
         """Return the result with the same other value at some places."""
         if len(at) == 1:
             return self.with_place(at[0], value)
+        return self.with_values([(k, value) for k in at], self.over(tuple(at)))
+
+    def with_values(self, changed: Sequence[tuple[int, float]], over: Sequence[int]) -> float:
+        """Return the result with other values at some places; ``over`` are the places above."""
         values = list(self.values)
-        for k in at:
+        for k, value in changed:
             values[k] = value
-        for k in self._over(tuple(at)):
+        for k in over:
             place = self.places[k]
             values[k] = OPERATIONS[place.operation](*[values[j] for j in place.below])
         return real(values[0])
 
-    def _over(self, at: tuple[int, ...]) -> list[int]:
+    def over(self, at: tuple[int, ...]) -> list[int]:
         """Return the places above some places, the lowest first."""
         over = set()
         for start in at:

@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from functools import partial
 
 from lineproof.audit.data import Claim, read_from
-from lineproof.audit.slip_bindings import UNITS_BY_KIND, others_for, shown
+from lineproof.audit.slip_bindings import others_for, shown, ways_of_units
 from lineproof.audit.slip_digits import changed, swapped, written
 from lineproof.audit.slip_edits import Edit, Line, words_of
 from lineproof.audit.slip_scope import LOADS, is_next
@@ -39,7 +39,7 @@ def edits_of_copy(line: Line, claim: Claim) -> Iterator[Edit]:
     """Give the slips made when the result was written down: unit, sign, decimal point."""
     value, half = line.pair(0)
     yield Edit("sign", TOP, -value, half, partial("{}".format, "the sign of the result turned"))
-    for factor, family, why in UNITS_BY_KIND.get(line.scope.units[line.node.id], ()):
+    for factor, family, why in ways_of_units(line.scope.units[line.node.id]):
         words = partial("the result in the wrong unit: {}".format, why)
         own = "result unit" if family == "unit" else family
         yield Edit(own, TOP, value * factor, half * factor, words)

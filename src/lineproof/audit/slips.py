@@ -4,11 +4,12 @@ from __future__ import annotations
 
 import math
 from collections.abc import Container, Iterator, Mapping, Sequence
+from dataclasses import dataclass, field
 
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.audit.graph import Graph
 from lineproof.audit.slip_bindings import edits_of_bindings, others_for
-from lineproof.audit.slip_carry import Onward, Reach, carried_or_none, carry, reach_of
+from lineproof.audit.slip_carry import Carrier, Onward, fitting, reach_of
 from lineproof.audit.slip_edits import Edit, Line, edits_of, words_of
 from lineproof.audit.slip_rank import Fit, ranked, shares
 from lineproof.audit.slip_scope import Pairs, Scope, scope_of
@@ -21,6 +22,8 @@ LOOSE = 3.0
 """At first fits are sought so many widths wide; then the width of each is worked out."""
 NOT_ABOVE = frozenset(("far", "mistyped constant", "mistyped argument", "place", "decimal"))
 """Large families that are not tried in lines above the claimed one: they fit anything."""
+MOST_KEPT = 400
+"""Edits of so many lines are kept while one table of claims is searched."""
 
 
 def find_slips(
@@ -35,26 +38,97 @@ def find_slips(
     ``used`` gives for every value of the graph what follows from the values that the claim itself
     uses, in internal units; a value not in it is taken as recorded. The slip is sought in the
     claimed line and in the lines between it and the ``claimed`` ones above. An empty tuple says
-    that no single slip known here fits.
+    that no single slip known here fits. For many claims of one table, :class:`SlipFinder` is
+    quicker.
     """
-    scope = scope_of(graph)
-    pairs = Pairs(graph, used)
-    line = _line(scope, pairs, entry_id)
-    if line is None:
-        return ()
-    search = _Search(scope, pairs, claim)
-    fits = [*search.own(line)]
-    reach = reach_of(scope, entry_id, claimed)
-    for above, distance in reach.lines.items():
-        fits += search.above(reach, above, distance)
-    for leaf, distance in reach.leaves.items():
-        fits += search.leaf(reach, leaf, distance)
-    return ranked(fits, claim)
+    return SlipFinder(graph, used).slips(entry_id, claim, claimed)
 
 
 def none_fits(graph: Graph, entry_id: str) -> str:
     """Return the sentence for a claim that no single slip reproduces."""
     return f"No single slip reproduces the value claimed for {words_of(scope_of(graph), entry_id)}."
+
+
+@dataclass(frozen=True, slots=True)
+class Tried:
+    """The edits of a line with what each makes of the line, in the order of these values."""
+
+    line: Line
+    edits: Sequence[Edit]
+    values: Sequence[float]
+    share: Mapping[str, float]
+
+
+@dataclass(frozen=True, slots=True)
+class Target:
+    """What a claim stands for, and how wide the claim's own arguments make its value."""
+
+    claim: Claim
+    relative: float
+    half: float
+
+    @property
+    def room(self) -> tuple[float, float]:
+        """Between these values fits are sought at first."""
+        wanted = self.claim.stands_for
+        size = max(abs(wanted.low), abs(wanted.high))
+        room = LOOSE * self.relative * size + (0.01 * size if self.relative else 0.0) + 1e-9 * size
+        return wanted.low - room, wanted.high + room
+
+
+@dataclass(frozen=True)
+class SlipFinder:
+    """Finds the slips behind the claims of one table, made with the values ``used``.
+
+    Lines worked out for one claim are kept for the next.
+    """
+
+    graph: Graph
+    used: Mapping[str, Interval]
+    _pairs: Pairs = field(init=False, repr=False)
+    _scope: Scope = field(init=False, repr=False)
+    _carrier: Carrier = field(init=False, repr=False)
+    _lines: dict[str, Line | None] = field(default_factory=dict, init=False, repr=False)
+    _above: dict[str, Tried | None] = field(default_factory=dict, init=False, repr=False)
+
+    def __post_init__(self) -> None:
+        object.__setattr__(self, "_pairs", Pairs(self.graph, self.used))
+        object.__setattr__(self, "_scope", scope_of(self.graph))
+        carrier = Carrier(self._scope, self._pairs, self._line)
+        object.__setattr__(self, "_carrier", carrier)
+
+    def slips(self, entry_id: str, claim: Claim, claimed: Container[str] = ()) -> tuple[Slip, ...]:
+        """Return the single slips that reproduce a claim, as :func:`find_slips` does."""
+        line = self._line(entry_id)
+        if line is None:
+            return ()
+        value, half = line.places.values[0], line.places.halves[0]
+        target = Target(claim, half / abs(value) if value else 0.0, self._pairs[entry_id][1])
+        fits = list(_fits(_own(line, claim), target, None, 1.0, ""))
+        reach = reach_of(self._scope, entry_id, claimed)
+        for above, distance in (*reach.lines.items(), *reach.leaves.items()):
+            onward = self._carrier.onward(reach, above)
+            tried = self._tried(above) if onward is not None else None
+            if tried is None:
+                continue
+            where = ", wherever it is used"
+            if above in reach.lines:
+                where = f", in {words_of(self._scope, above)}, which carries on to the claim"
+            fits += _fits(tried, target, onward, math.exp(-FARTHER * distance), where)
+        return ranked(fits, claim)
+
+    def _line(self, entry_id: str) -> Line | None:
+        if entry_id not in self._lines:
+            self._lines[entry_id] = _line(self._scope, self._pairs, entry_id)
+        return self._lines[entry_id]
+
+    def _tried(self, entry_id: str) -> Tried | None:
+        if entry_id not in self._above:
+            if len(self._above) > MOST_KEPT:
+                self._above.clear()
+            line = self._line(entry_id)
+            self._above[entry_id] = None if line is None else _above(line)
+        return self._above[entry_id]
 
 
 def _line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
@@ -68,105 +142,62 @@ def _line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
         return None
 
 
-class _Search:
-    """The search for one claim."""
+def _own(line: Line, claim: Claim) -> Tried:
+    """Return the edits of the claimed line itself."""
+    edits = [*edits_of(line), *edits_of_bindings(line)] if line.node.tree is not None else []
+    return _tried(line, [*edits, *edits_of_result(line), *edits_of_copy(line, claim)])
 
-    def __init__(self, scope: Scope, pairs: Pairs, claim: Claim) -> None:
-        self.scope, self.pairs, self.claim = scope, pairs, claim
 
-    def own(self, line: Line) -> Iterator[Fit]:
-        """Give the slips in the claimed line itself."""
-        edits = [*edits_of(line), *edits_of_bindings(line)] if line.node.tree is not None else []
-        edits += [*edits_of_result(line), *edits_of_copy(line, self.claim)]
-        yield from self._fits(line, edits, None, 0.0, "")
-
-    def above(self, reach: Reach, entry_id: str, distance: int) -> Iterator[Fit]:
-        """Give the slips in an unclaimed line, carried on to the claim."""
-        line = _line(self.scope, self.pairs, entry_id)
-        onward = self._onward(reach, entry_id)
-        if line is None or onward is None:
-            return
-        tree_edits = [*edits_of(line), *edits_of_bindings(line)] if line.node.tree else []
-        edits = [e for e in (*tree_edits, *edits_of_result(line)) if e.family not in NOT_ABOVE]
-        where = f", in {words_of(self.scope, entry_id)}, which carries on to the claim"
-        yield from self._fits(line, edits, onward, FARTHER * distance, where)
-
-    def leaf(self, reach: Reach, entry_id: str, distance: int) -> Iterator[Fit]:
-        """Give the slips in a given or a looked-up value that several of the lines use."""
-        line = _line(self.scope, self.pairs, entry_id)
-        onward = self._onward(reach, entry_id)
-        if line is None or onward is None:
-            return
+def _above(line: Line) -> Tried:
+    """Return the edits of an unclaimed line, a given or a looked-up value above a claim."""
+    if line.node.is_computed:
+        inside = [*edits_of(line), *edits_of_bindings(line)] if line.node.tree is not None else []
+        edits = [*inside, *edits_of_result(line)]
+    else:
         edits = [
-            Edit(o.family, TOP, o.value, o.half, o.words, o.far)
-            for o in others_for(line, entry_id)
-            if o.family not in NOT_ABOVE
+            Edit(other.family, TOP, other.value, other.half, other.words, other.far)
+            for other in others_for(line, line.node.id)
         ]
-        yield from self._fits(line, edits, onward, FARTHER * distance, ", wherever it is used")
+    return _tried(line, [edit for edit in edits if edit.family not in NOT_ABOVE])
 
-    def _onward(self, reach: Reach, entry_id: str) -> Onward | None:
+
+def _tried(line: Line, edits: Sequence[Edit]) -> Tried:
+    worked = []
+    for edit in edits:
         try:
-            return carry(self.scope, self.pairs, reach, entry_id)
+            worked.append((line.places.with_value(edit.at, edit.value), edit))
         except FAILURES:
-            return None
-
-    def _fits(
-        self,
-        line: Line,
-        edits: Sequence[Edit],
-        onward: Onward | None,
-        far: float,
-        where: str,
-    ) -> Iterator[Fit]:
-        share = shares(edits)
-        own_value = line.places.values[0]
-        own_half = line.places.halves[0]
-        relative = own_half / abs(own_value) if own_value else 0.0
-        wanted = self.claim.stands_for
-        middle, room = wanted.middle, wanted.half
-        loose = LOOSE * (relative + 1e-9) + (0.01 if relative else 0.0)
-        done: dict[float, float | None] = {}
-        for edit in edits:
-            value = _first_look(line.places, edit)
-            if value is None:
-                continue
-            if onward is not None:
-                if value not in done:
-                    done[value] = carried_or_none(onward.quick, value)
-                value_there = done[value]
-                if value_there is None:
-                    continue
-            else:
-                value_there = value
-            if abs(value_there - middle) > room + loose * abs(value_there):
-                continue
-            fit = self._worked(line, edit, onward)
-            if fit is not None:
-                weight = share[edit.family] * math.exp(-far)
-                yield Fit(edit, fit[0], fit[1], weight, where)
-
-    def _worked(self, line: Line, edit: Edit, onward: Onward | None) -> tuple[float, float] | None:
-        """Return value and half width at the claim, if they meet what it stands for."""
-        changed = dict.fromkeys(edit.at, (edit.value, edit.half))
-        try:
-            value, half = line.places.with_places(changed)
-            if onward is not None:
-                ends = [onward.exact(value - half), onward.exact(value + half)] if half else []
-                value = onward.exact(value)
-                half = max((abs(end - value) for end in ends), default=0.0) + self._rest(value)
-        except FAILURES:
-            return None
-        meets = self.claim.stands_for.meets(Interval(value - half, value + half))
-        return (value, half) if meets else None
-
-    def _rest(self, value: float) -> float:
-        """Return the half width that the claim's own other arguments bring."""
-        own, half = self.pairs[self.claim.id]
-        return abs(value) * half / abs(own) if own else half
+            continue
+    worked.sort(key=lambda pair: pair[0])
+    return Tried(line, [e for _, e in worked], [v for v, _ in worked], shares(edits))
 
 
-def _first_look(places: Places, edit: Edit) -> float | None:
+def _fits(
+    tried: Tried, target: Target, onward: Onward | None, nearness: float, where: str
+) -> Iterator[Fit]:
+    low, high = target.room
+    if onward is None:
+        found = [at for at, value in enumerate(tried.values) if low <= value <= high]
+    else:
+        found = fitting(onward.quick, tried.values, low, high) if tried.values else []
+    for at in found:
+        edit = tried.edits[at]
+        made = _worked(tried.line, edit, target, onward)
+        if made is not None:
+            yield Fit(edit, *made, tried.share[edit.family] * nearness, where)
+
+
+def _worked(
+    line: Line, edit: Edit, target: Target, onward: Onward | None
+) -> tuple[float, float] | None:
+    """Return value and half width at the claim, if they meet what it stands for."""
     try:
-        return places.with_value(edit.at, edit.value)
+        value, half = line.places.with_places(dict.fromkeys(edit.at, (edit.value, edit.half)))
+        if onward is not None:
+            ends = [onward.exact(value - half), onward.exact(value + half)] if half else []
+            value = onward.exact(value)
+            half = max((abs(end - value) for end in ends), default=0.0) + target.half
     except FAILURES:
         return None
+    meets = target.claim.stands_for.meets(Interval(value - half, value + half))
+    return (value, half) if meets else None
