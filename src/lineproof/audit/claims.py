@@ -19,7 +19,9 @@ from lineproof.quantity import echo, internal_factor, read_quantity
 CLAIMED = ("claimed", "value")
 NAMES = ("id", "label", "symbol")
 _WORDS = re.compile(r"[a-z0-9]+")
-_BARE = re.compile(r"\s*[+-]?[\d.]+(?:[eE][+-]?\d+)?\s*\Z")
+_BARE = re.compile(r"[+-]?[\d.,' ]+(?:[eE][+-]?\d+)?\Z")
+_GROUPED = re.compile(r"[+-]?\d{1,3}(?:[ ,']\d{3})+(?:\.\d*)?(?![\d,' ]*\d)")
+"""Digits in groups of three: 12 300 or 12,300."""
 _MOST_PLACES = 6
 
 
@@ -40,7 +42,8 @@ def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, .
         faults.add(f"{table.name}: row 1: no heading 'claimed'; write 'id,claimed,unit'")
     if not any(name in table.headings for name in NAMES):
         faults.add(f"{table.name}: row 1: no heading 'id', 'label' or 'symbol'; write 'id'")
-    faults.raise_if_any()
+    if column is None or not any(name in table.headings for name in NAMES):
+        faults.raise_if_any()
     reader = _Reader(graph, faults)
     claims = [
         reader.claim(row, row.cells[column or ""])
@@ -157,8 +160,14 @@ class _Reader:
     # -- the value ---------------------------------------------------------------------------
 
     def _value(self, row: Row, node: Node, typed: str) -> Claim | None:
-        unit = row.cells.get("unit", "") if _BARE.match(typed) else ""
-        text = typed.replace("−", "-")
+        text = " ".join(typed.replace("−", "-").split())
+        grouped = _GROUPED.match(text)
+        if grouped is not None:
+            plain = re.sub("[ ,']", "", grouped[0])
+            fault = f"{echo(typed)} has marks between its digits; write {plain!r}"
+            self.faults.at(row.number, "claimed", fault)
+            return None
+        unit = row.cells.get("unit", "") if _BARE.match(text) else ""
         try:
             read = read_quantity(node.symbol, f"{text} {unit}".strip(), node.unit)
         except UserError as error:

@@ -1,0 +1,166 @@
+"""Reading claims: lines by id, label or symbol and place; units; every fault with its row."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import pytest
+from tests.audit.hand import beam, sheet_of
+
+from lineproof.audit.blank import blank_table
+from lineproof.audit.claims import read_claims
+from lineproof.audit.data import Claim
+from lineproof.audit.graph import Graph
+from lineproof.audit.tables import read_table, write_table
+from lineproof.errors import UserError
+
+
+@pytest.fixture(scope="module")
+def graph() -> Graph:
+    return Graph(beam())
+
+
+@pytest.fixture(scope="module")
+def twice() -> Graph:
+    """The same symbol in two parts."""
+    sheet = sheet_of({}, {"q": "4 kPa", "b_tr": "3 m"})
+    for span in ("1", "2"):
+        with sheet.part(f"load-{span}", f"Span {span}: load"):
+            sheet.line("w = q*b_tr", unit="kN/m")
+    return Graph(sheet.close())
+
+
+def read(graph: Graph, folder: Path, text: str) -> tuple[Claim, ...]:
+    path = folder / "claims.csv"
+    path.write_text(text, encoding="utf-8")
+    return read_claims(graph, path)
+
+
+def faults(graph: Graph, folder: Path, text: str) -> tuple[str, ...]:
+    with pytest.raises(UserError) as caught:
+        read(graph, folder, text)
+    start = f"{folder / 'claims.csv'}: "
+    assert all(fault.startswith(start) for fault in caught.value.faults)
+    return tuple(fault.removeprefix(start) for fault in caught.value.faults)
+
+
+def test_a_claim_stands_for_half_a_unit_of_its_last_digit(graph: Graph, tmp_path: Path) -> None:
+    """M_r "207 kN.m": 206.5 to 207.5 kN.m, in N.mm; d "0.539 m": 538.5 to 539.5 mm."""
+    claims = read(graph, tmp_path, "id,claimed,unit\nstrength/M_r,207,kN.m\nbeam/d,0.539,m\n")
+    first, second = claims
+    assert (first.id, first.typed, first.unit, first.row) == ("strength/M_r", "207", "kN.m", 2)
+    assert (first.value, first.stands_for.low, first.stands_for.high) == (207e6, 206.5e6, 207.5e6)
+    assert (second.stands_for.low, second.stands_for.high) == pytest.approx((538.5, 539.5))
+
+
+@pytest.mark.parametrize(
+    ("typed", "unit", "value"),
+    [
+        ("207", "kN.m", 207e6),
+        ("207 kN·m", "", 207e6),
+        ("207 kN.m", "kip.ft", 207e6),  # the cell's own unit goes before that of the column
+        ("152.4", "kip.ft", 152.4 * 1_355_817.9483),
+        ("2.07e2", "kN.m", 207e6),
+        ("−207", "kN.m", -207e6),
+    ],
+)
+def test_units_of_the_same_kind_are_converted(
+    graph: Graph, tmp_path: Path, typed: str, unit: str, value: float
+) -> None:
+    """1 kip.ft = 4448.2216 N x 304.8 mm = 1 355 817.95 N.mm."""
+    (claim,) = read(graph, tmp_path, f"id,claimed,unit\nstrength/M_r,{typed},{unit}\n")
+    assert claim.value == pytest.approx(value, rel=1e-9)
+
+
+def test_lines_are_named_by_id_label_or_symbol(graph: Graph, tmp_path: Path) -> None:
+    text = "label,symbol,claimed,unit\n2.1,,539,mm\n,M_r,207,kN.m\n,beam/a,65.0,mm\n"
+    assert [c.id for c in read(graph, tmp_path, text)] == ["beam/d", "strength/M_r", "beam/a"]
+
+
+@pytest.mark.parametrize("place", ["span 2", "Span 2: load", "load-2", "SPAN 2", "2"])
+def test_a_symbol_in_several_parts_needs_its_place(
+    twice: Graph, tmp_path: Path, place: str
+) -> None:
+    (claim,) = read(twice, tmp_path, f"symbol,place,claimed\nw,{place},12 kN/m\n")
+    assert claim.id == "load-2/w"
+    assert faults(twice, tmp_path, "symbol,place,claimed\nw,,12 kN/m\n") == (
+        "row 2, symbol: w stands in 2 places; write one of load-1/w, load-2/w",
+    )
+    assert faults(twice, tmp_path, "symbol,place,claimed\nw,span 7,12 kN/m\n") == (
+        "row 2, symbol: w stands nowhere at 'span 7'; write one of load-1/w, load-2/w",
+    )
+
+
+def test_all_faults_come_at_once(graph: Graph, tmp_path: Path) -> None:
+    text = (
+        "id,claimed,unit\n"
+        "strength/M_rr,207,kN.m\n"
+        "beam/d,539,\n"
+        "beam/a,=1+1,mm\n"
+        "given/b,400,mm\n"
+        "given/b,400,mm\n"
+        'given/h,"600,5",mm\n'
+        "given/n_b,four,\n"
+        "given/l,40,kN\n"
+        "strength/strength,0.87,\n"
+        ",12,mm\n"
+        "beam/A_s,1 200,mm2\n"
+    )
+    expected = """\
+row 4, claimed: '=1+1' is a formula; write the value that it shows
+row 2, id: 'strength/M_rr' is not a line of this calc; write 'strength/M_r' or 'strength/M_f'
+row 3, claimed: d: '539' has no unit; write '539 mm'
+row 6, id: given/b is claimed in row 5 already; keep one of them
+row 7, claimed: h: '600,5 mm' is not a number with a unit; write a decimal point: '600.5 mm'
+row 8, claimed: n_b: 'four' is not a number with a unit; write for example '25'
+row 9, claimed: l: '40 kN' is a force, but a length is needed; write it in mm, cm, m, in, ft
+row 10, id: 'strength/strength' is a check and has no value; claim the lines it compares
+row 11, id: names no line; write the id that the blank table shows
+row 12, claimed: '1 200' has marks between its digits; write '1200'
+"""
+    assert "\n".join(faults(graph, tmp_path, text)) + "\n" == expected
+
+
+def test_symbols_not_known_get_the_nearest_names(graph: Graph, tmp_path: Path) -> None:
+    (said,) = faults(graph, tmp_path, "symbol,claimed\nM_R,207 kN.m\n")
+    assert "'M_R' is not a line of this calc; write 'M_r'" in said
+    (said,) = faults(graph, tmp_path, "symbol,claimed\nzzzzzz,207 kN.m\n")
+    assert said.endswith("take the id of a blank")
+    (said,) = faults(graph, tmp_path, "label,claimed\n99.9,207 kN.m\n")
+    assert "'99.9' is not a line" in said
+
+
+@pytest.mark.parametrize(
+    ("text", "said"),
+    [
+        ("id,mine\nbeam/d,539\n", "no heading 'claimed'; write 'id,claimed,unit'"),
+        ("name,claimed\nbeam/d,539\n", "no heading 'id', 'label' or 'symbol'; write 'id'"),
+        ("id,claimed\nbeam/d,\n", "no row has a value in the column 'claimed'; write one"),
+    ],
+)
+def test_tables_without_claims(graph: Graph, tmp_path: Path, text: str, said: str) -> None:
+    assert said in faults(graph, tmp_path, text)[0]
+
+
+def test_many_faults_are_counted(graph: Graph, tmp_path: Path) -> None:
+    said = faults(graph, tmp_path, "id,claimed\n" + "beam/zz,1\n" * 1000)
+    assert len(said) == 41
+    assert said[-1] == "and 960 faults more"
+
+
+@pytest.mark.parametrize("ending", [".csv", ".xlsx"])
+def test_a_blank_filled_in_reads_as_claims(graph: Graph, tmp_path: Path, ending: str) -> None:
+    blank = tmp_path / f"blank{ending}"
+    blank.write_bytes(blank_table(graph, ending))
+    table = read_table(blank)
+    values = {"beam/d": "539", "strength/M_r": "0.207e3", "given/h": "600"}
+    rows = [
+        [
+            {**row.cells, "claimed": values.get(row.cells["id"], "")}.get(h, "")
+            for h in table.headings
+        ]
+        for row in table.rows
+    ]
+    filled = tmp_path / f"filled{ending}"
+    filled.write_bytes(write_table(table.headings, rows, ending))
+    assert {c.id: c.typed for c in read_claims(graph, filled)} == values

@@ -1,0 +1,211 @@
+"""Tables of claims: read as text, hostile ones refused by name, written without formulas."""
+
+from __future__ import annotations
+
+import csv
+import io
+import zipfile
+from pathlib import Path
+
+import pytest
+from openpyxl import Workbook, load_workbook
+
+from lineproof.audit.tables import read_table, write_table
+from lineproof.errors import UserError
+
+GOOD = [["id", "claimed", "unit"], ["beam/d", "0.50", "m"], ["beam/b", "400", "mm"]]
+
+
+def saved(folder: Path, text: str | bytes, name: str = "claims.csv") -> Path:
+    path = folder / name
+    path.write_bytes(text if isinstance(text, bytes) else text.encode())
+    return path
+
+
+def workbook(folder: Path, rows: list[list[object]], merged: str = "") -> Path:
+    book = Workbook()
+    sheet = book.worksheets[0]
+    for row in rows:
+        sheet.append(row)
+    if merged:
+        sheet.merge_cells(merged)
+    path = folder / "claims.xlsx"
+    book.save(path)
+    return path
+
+
+def with_member(path: Path, name: str, content: bytes) -> Path:
+    with zipfile.ZipFile(path, "a", zipfile.ZIP_DEFLATED) as archive:
+        archive.writestr(name, content)
+    return path
+
+
+def faults(path: Path) -> tuple[str, ...]:
+    with pytest.raises(UserError) as caught:
+        read_table(path)
+    assert all(str(path) in fault for fault in caught.value.faults)
+    return caught.value.faults
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "id,claimed,unit\nbeam/d,0.50,m\nbeam/b,400,mm\n",
+        "\ufeffID ; Claimed;unit\r\nbeam/d;0.50;m\r\nbeam/b;400;mm\r\n",
+        'id\tclaimed\tunit\n"beam/d"\t0.50\tm\nbeam/b\t400\tmm\n\n\n',
+    ],
+)
+def test_csv_of_every_kind_reads_alike(tmp_path: Path, text: str) -> None:
+    table = read_table(saved(tmp_path, text))
+    assert table.headings == ("id", "claimed", "unit")
+    assert [(row.number, *row.cells.values()) for row in table.rows] == [
+        (2, "beam/d", "0.50", "m"), (3, "beam/b", "400", "mm"),
+    ]  # fmt: skip
+
+
+def test_rows_are_counted_as_a_spreadsheet_shows_them(tmp_path: Path) -> None:
+    """A cell of two lines makes one row; an empty row counts and is passed over."""
+    table = read_table(saved(tmp_path, 'id,claimed\n"two\nlines",1\n\nx,2\n'))
+    assert [row.number for row in table.rows] == [2, 4]
+
+
+def test_a_workbook_reads_as_it_shows(tmp_path: Path) -> None:
+    """0.5 under the format 0.00 shows 0.50, which stands for less than 0.5 does."""
+    path = workbook(tmp_path, [["id", "claimed", "unit"], ["beam/d", 0.5, "m"], ["beam/b", 400]])
+    book = load_workbook(path)
+    book.worksheets[0]["B2"].number_format = "0.00"
+    book.save(path)
+    rows = read_table(path).rows
+    assert [row.cells["claimed"] for row in rows] == ["0.50", "400"]
+
+
+@pytest.mark.parametrize("ending", [".csv", ".xlsx"])
+def test_what_is_written_reads_back_and_starts_no_formula(tmp_path: Path, ending: str) -> None:
+    cells = ["=1+1", "+1", "-12.5", "-x", "@SUM(A1)", "＝1", "Ø 20", '"quoted", twice', " =2"]
+    content = write_table(["id", "what"], [["x", cell] for cell in cells], ending)
+    path = saved(tmp_path, content, f"t{ending}")
+    if ending == ".csv":
+        plain = [row[1] for row in csv.reader(io.StringIO(content.decode("utf-8-sig")))][1:]
+    else:
+        sheet = load_workbook(path).worksheets[0]
+        plain = [str(row[1].value) for row in sheet.iter_rows(min_row=2)]
+        assert {row[1].data_type for row in sheet.iter_rows()} == {"s"}
+    for text in plain:
+        number = text.lstrip("+-").replace(".", "").isdigit()
+        assert number or text.lstrip()[0] not in "=+-@＝"
+    assert [row.cells["what"] for row in read_table(path).rows] == cells
+
+
+@pytest.mark.parametrize("ending", [".csv", ".xlsx"])
+def test_formulas_are_refused_with_row_and_column(tmp_path: Path, ending: str) -> None:
+    rows: list[list[object]] = [["id", "claimed"], ["a", "=1+1"], ["b", 2], ["c", "=B2*9"]]
+    path = tmp_path / "claims.csv"
+    if ending == ".xlsx":
+        path = workbook(tmp_path, rows)
+    else:
+        path.write_text("\n".join(",".join(map(str, row)) for row in rows))
+    said = faults(path)
+    assert len(said) == 2
+    assert "row 2, claimed: '=1+1' is a formula; write the value" in said[0]
+    assert "row 4, claimed" in said[1]
+
+
+def test_merged_cells_are_refused(tmp_path: Path) -> None:
+    path = workbook(tmp_path, [["id", "claimed"], ["a", 1], ["b", 2]], merged="A2:B2")
+    assert "cells A2:B2 are merged; split them" in faults(path)[0]
+
+
+def test_macros_are_refused(tmp_path: Path) -> None:
+    path = workbook(tmp_path, [["id", "claimed"], ["a", 1]])
+    with_member(path, "xl/vbaProject.bin", b"\0")
+    assert "holds macros" in faults(path)[0]
+    renamed = path.rename(tmp_path / "claims.xlsm")
+    assert "save it as .xlsx without them" in faults(renamed)[0]
+
+
+def test_a_zip_bomb_is_not_opened(tmp_path: Path) -> None:
+    """Fifty megabytes of zeros pack into fifty kilobytes: a thousand times."""
+    path = workbook(tmp_path, [["id", "claimed"], ["a", 1]])
+    with_member(path, "xl/media/x.bin", bytes(50_000_000))
+    assert path.stat().st_size < 100_000
+    assert "times its size. Not opened" in faults(path)[0]
+    big = workbook(tmp_path, [["id", "claimed"], ["a", 1]])
+    with_member(big, "xl/media/x.bin", bytes(50_000_000))
+    with_member(big, "xl/media/y.bin", bytes(50_000_000))
+    assert "unpacks to 100 MB" in faults(big)[0]
+
+
+def test_an_archive_of_many_files_or_with_declarations_is_not_opened(tmp_path: Path) -> None:
+    path = workbook(tmp_path, [["id", "claimed"], ["a", 1]])
+    entities = b'<?xml version="1.0"?><!DOCTYPE x [<!ENTITY a "aaaa">]><x>&a;</x>'
+    with_member(path, "xl/worksheets/sheet9.xml", entities)
+    assert "declarations that no spreadsheet writes" in faults(path)[0]
+    many = workbook(tmp_path, [["id", "claimed"], ["a", 1]])
+    with zipfile.ZipFile(many, "a") as archive:
+        for number in range(600):
+            archive.writestr(f"x/{number}", b"")
+    assert "files inside" in faults(many)[0]
+
+
+@pytest.mark.parametrize(
+    ("content", "name", "said"),
+    [
+        (b"", "c.csv", "the file is empty"),
+        (b"", "c.xlsx", "the file is empty"),
+        (b"PK\x03\x04 cut off", "c.xlsx", "not a workbook, or cut off"),
+        (b"id,claimed\n", "c.xlsx", "not a workbook, or cut off"),
+        (b"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1", "c.xlsx", "old or locked workbook"),
+        (b"PK\x03\x04", "c.csv", "a workbook with the ending .csv"),
+        ("id,claimed\nx,1".encode("utf-16"), "c.csv", "UTF-16 text; save it as 'CSV UTF-8'"),
+        ("id,Ø\nx,1".encode("latin-1"), "c.csv", "not UTF-8 at byte 3"),
+        (b"id,claimed\0\n", "c.csv", "zero bytes"),
+        (b'id,claimed\n"x,1\n', "c.csv", "no CSV"),
+        (b"\n\n", "c.csv", "the file is empty"),
+        (b",,\nx,1\n", "c.csv", "row 1 holds no headings"),
+        (b"id,claimed,Claimed\nx,1,2\n", "c.csv", "heading 'claimed' stands twice"),
+        (b"id,claimed\nx,1,2\n", "c.csv", "row 2, column 3: '2' stands beyond the last heading"),
+        (b"id\nx" + b"y" * 600, "c.csv", "row 2, id: holds more than 500 characters"),
+        (b"id\n" + b"y" * 200_000, "c.csv", "no CSV (field larger"),
+        (b"id", "c.ods", "neither .csv nor .xlsx"),
+    ],
+)  # fmt: skip
+def test_what_is_no_table_is_refused(tmp_path: Path, content: bytes, name: str, said: str) -> None:
+    assert said in faults(saved(tmp_path, content, name))[0]
+
+
+def test_a_file_that_is_not_there(tmp_path: Path) -> None:
+    assert "cannot be read" in faults(tmp_path / "none.csv")[0]
+
+
+def test_too_many_rows_are_refused_with_the_limit(tmp_path: Path) -> None:
+    path = saved(tmp_path, "id,claimed\n" + "x,1\n" * 100_000)
+    assert faults(path) == (f"{path}: more than 20 000 rows; keep one row for each claim",)
+
+
+def test_too_many_rows_of_a_workbook(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    path = workbook(tmp_path, [["id", "claimed"], *(["x", 1] for _ in range(30))])
+    assert len(read_table(path).rows) == 30
+    monkeypatch.setattr("lineproof.audit.tables.MOST_ROWS", 29)
+    assert "more than 29 rows" in faults(path)[0]
+
+
+def test_a_zip_that_is_no_workbook(tmp_path: Path) -> None:
+    path = tmp_path / "claims.xlsx"
+    with zipfile.ZipFile(path, "w") as archive:
+        archive.writestr("readme.txt", "hello")
+    assert "a zip archive without a worksheet" in faults(path)[0]
+    with_member(path, "xl/worksheets/sheet1.xml", b"<worksheet")
+    assert "cannot be read as a workbook" in faults(path)[0]
+
+
+def test_a_date_is_told_as_one(tmp_path: Path) -> None:
+    """A spreadsheet makes a date of 1-2; the reader of claims then names it."""
+    import datetime as dt  # noqa: PLC0415 - here alone
+
+    path = workbook(tmp_path, [["id", "claimed"], ["a", dt.date(2024, 2, 1)]])
+    assert "(a date)" in read_table(path).rows[0].cells["claimed"]
+
+
+def test_another_ending_is_not_written() -> None:
+    with pytest.raises(UserError, match=r"'.pdf' is no ending of a table"):
+        write_table(["id"], GOOD, ".pdf")
