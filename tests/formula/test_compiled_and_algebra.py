@@ -4,7 +4,9 @@ from __future__ import annotations
 
 import math
 import time
+from collections.abc import Callable
 from types import SimpleNamespace
+from typing import Any
 
 import mpmath
 import pytest
@@ -14,7 +16,7 @@ from hypothesis import strategies as st
 from lineproof.errors import UserError
 from lineproof.formula import Binary, Call, Name, Negative, Number, Tree, formula, parse_expression
 from lineproof.formula.algebra import expression, partial_derivative, same, solve_for, value_at
-from lineproof.formula.compiled import compile_step, compile_tree
+from lineproof.formula.compiled import compile_step, compile_tree, weave_tree
 
 NAMES = ("a", "b", "c")
 VALUES = st.floats(min_value=0.1, max_value=50.0)
@@ -102,6 +104,65 @@ def test_the_step_of_a_sheet_is_the_same_function(tree: Tree, a: float, b: float
     args, value = compile_step(tree, NAMES)(scope)
     assert value == expected or value != value or isinstance(value, complex)  # noqa: PLR0124
     assert [arg.value for arg in args] == [a, b, c]
+
+
+def _outcome(function: Callable[..., float], *at: float) -> str:
+    """Return every bit of what a function gives, or the error that it raises."""
+    try:
+        value = function(*at)
+    except (ArithmeticError, ValueError, TypeError) as error:
+        return type(error).__name__
+    return value.hex() if isinstance(value, float) else repr(value)
+
+
+def _worked(tree: Tree, at: dict[str, float]) -> Any:
+    """Work a tree out node by node, as it stands: what both kinds of functions have to give."""
+    match tree:
+        case Number(text):
+            return float(text)
+        case Name(name):
+            return at[name]
+        case Negative(of):
+            return -_worked(of, at)
+        case Binary(op, left, right):
+            x, y = _worked(left, at), _worked(right, at)
+            return {
+                "+": lambda: x + y, "-": lambda: x - y, "*": lambda: x * y, "/": lambda: x / y,
+                "**": lambda: x**y,
+            }[op]()  # fmt: skip
+        case Call(name, args):
+            values = [_worked(a, at) for a in args]
+            if name in ("sin", "cos", "tan", "cot"):
+                angle = math.radians(values[0])
+                return 1.0 / math.tan(angle) if name == "cot" else getattr(math, name)(angle)
+            if name == "cbrt" and values[0] < 0:
+                raise ValueError(name)
+            return {**vars(math), "abs": math.fabs, "min": min, "max": max}[name](*values)
+
+
+@settings(deadline=None, max_examples=300)
+@given(TREES, *[st.floats(-50, 50)] * 3)
+def test_compiled_and_woven_functions_give_the_same_bits(
+    tree: Tree, a: float, b: float, c: float
+) -> None:
+    node_by_node = _outcome(lambda *at: _worked(tree, dict(zip(NAMES, at, strict=True))), a, b, c)
+    assert _outcome(compile_tree(tree, NAMES), a, b, c) == node_by_node
+    assert _outcome(weave_tree(tree, NAMES), a, b, c) == node_by_node
+
+
+@pytest.mark.parametrize("name", ["__import__('os').getcwd()", "a b", "_0", "lambda: 0", "'"])
+def test_no_text_of_a_tree_is_run(name: str) -> None:
+    scope = {name: SimpleNamespace(value=3.0)}
+    tree = Binary("*", Name(name), Number("-2"))
+    assert compile_tree(tree, [name])(3.0) == -6.0
+    assert weave_tree(tree, [name])(3.0) == -6.0
+    assert compile_step(tree, [name])(scope)[1] == -6.0
+    with pytest.raises(NameError):
+        compile_tree(tree, ["b"])(3.0)
+    with pytest.raises(KeyError):
+        weave_tree(tree, ["b"])
+    with pytest.raises((NameError, KeyError)):
+        compile_tree(Call(name, (Number("1"),)), [name])(3.0)
 
 
 @pytest.mark.parametrize(

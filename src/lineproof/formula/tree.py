@@ -8,32 +8,61 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass
+from functools import lru_cache
+
+MOST_KEPT = 16384
+"""Trees of which the names are kept: those of a large record, and of what is tried on them."""
+
+
+class _Node:
+    """What all nodes share: a hash that is worked out once, since trees are keys of many tables."""
+
+    __slots__ = ("hashed",)
+    hashed: int
+
+
+def _kept_hash(node: _Node) -> int:
+    try:
+        return node.hashed
+    except AttributeError:
+        pieces = [getattr(node, name) for name in node.__slots__]
+        made = hash((node.__class__.__name__, *pieces))
+        object.__setattr__(node, "hashed", made)
+        return made
 
 
 @dataclass(frozen=True, slots=True)
-class Number:
+class Number(_Node):
     """A constant, kept as the author typed it (``0.0015``)."""
+
+    __hash__ = _kept_hash
 
     text: str
 
 
 @dataclass(frozen=True, slots=True)
-class Name:
+class Name(_Node):
     """A quantity, by its id (``phi_s``)."""
+
+    __hash__ = _kept_hash
 
     id: str
 
 
 @dataclass(frozen=True, slots=True)
-class Negative:
+class Negative(_Node):
     """The expression with its sign changed."""
+
+    __hash__ = _kept_hash
 
     of: Tree
 
 
 @dataclass(frozen=True, slots=True)
-class Binary:
+class Binary(_Node):
     """Two expressions joined by ``+ - * / **``."""
+
+    __hash__ = _kept_hash
 
     op: str
     left: Tree
@@ -41,8 +70,10 @@ class Binary:
 
 
 @dataclass(frozen=True, slots=True)
-class Call:
+class Call(_Node):
     """A function of the grammar applied to its arguments."""
+
+    __hash__ = _kept_hash
 
     function: str
     args: tuple[Tree, ...]
@@ -65,6 +96,7 @@ def walk(tree: Tree) -> Iterator[Tree]:
                 yield from walk(arg)
 
 
+@lru_cache(maxsize=MOST_KEPT)
 def names_of(tree: Tree) -> tuple[str, ...]:
     """Return the ids of the tree's quantities, each once, in order of appearance."""
     return tuple(dict.fromkeys(node.id for node in walk(tree) if isinstance(node, Name)))

@@ -9,7 +9,7 @@ from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.formula import names_of, parse_criterion, parse_line
-from lineproof.formula.compiled import COMPARE, compile_tree
+from lineproof.formula.compiled import COMPARE, weave_tree
 from lineproof.formula.tree import Tree
 from lineproof.quantity import read_quantity
 from lineproof.quantity.units import internal_factor
@@ -138,7 +138,7 @@ def _value(entry: Mapping[str, Any], values: Mapping[str, float]) -> float:
 
 def _evaluate(tree: Tree, args: Mapping[str, str], values: Mapping[str, float]) -> float:
     names = names_of(tree)
-    result = compile_tree(tree, names)(*[values[args[name]] for name in names])
+    result = weave_tree(tree, names)(*[values[args[name]] for name in names])
     if not isinstance(result, float) or not math.isfinite(result):
         raise UserError("the result is not a real number")
     return result

@@ -16,7 +16,7 @@ from numpy.typing import NDArray
 
 from lineproof.beams.analysis.curves import Floats
 from lineproof.formula import Criterion, Formula
-from lineproof.formula.compiled import ROUND_OFF
+from lineproof.formula.compiled import ROUND_OFF, called
 
 Truths = NDArray[np.bool_]
 Values = Mapping[str, Any]
@@ -29,11 +29,11 @@ def _cot(angle: Floats) -> Floats:
 
 
 _SCOPE: dict[str, Any] = {
-    "function sqrt": np.sqrt,
-    "function abs": np.abs,
-    "function min": lambda *args: reduce(np.minimum, args),
-    "function max": lambda *args: reduce(np.maximum, args),
-    "function cot": _cot,
+    called("sqrt"): np.sqrt,
+    called("abs"): np.abs,
+    called("min"): lambda *args: reduce(np.minimum, args),
+    called("max"): lambda *args: reduce(np.maximum, args),
+    called("cot"): _cot,
     "__builtins__": {},
 }
 
