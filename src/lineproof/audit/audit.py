@@ -11,9 +11,14 @@ from lineproof.audit.judge import judge
 from lineproof.audit.junior import audit_record
 from lineproof.audit.missing import missing_checks
 from lineproof.audit.slips import find_slips
+from lineproof.audit.traps import trap_findings
 from lineproof.record import Record
 
-SEARCHES: tuple[Callable[[Record], tuple[Finding, ...]], ...] = (audit_record, missing_checks)
+SEARCHES: tuple[Callable[[Record], tuple[Finding, ...]], ...] = (
+    audit_record,
+    missing_checks,
+    trap_findings,
+)
 """The searches of a record by itself."""
 
 

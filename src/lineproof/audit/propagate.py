@@ -79,17 +79,19 @@ def combined(function: Function, forms: Sequence[Form]) -> Form:
     if not moved:
         return Form(middle)
     parts: dict[str, float] = {}
-    rest, slopes = 0.0, []
+    rest, bend, slopes = 0.0, 0.0, []
     for at, form in moved:
         half = form.half
         up = _at(function, middles, at, middles[at] + half, middle)
         down = _at(function, middles, at, middles[at] - half, middle)
         slope = (up - down) / (2 * half) if half else 0.0
-        rest += abs(slope) * form.rest + abs(up + down - 2 * middle) / 2
+        bent = (up + down - 2 * middle) / 4  # from nothing at the middle to twice this at the ends
+        bend += bent
+        rest += abs(slope) * form.rest + abs(bent)
         slopes.append(slope)
         for source, part in form.parts.items():
             parts[source] = parts.get(source, 0.0) + slope * part
-    made = Form(middle, _trimmed(parts, middle), rest)
+    made = Form(middle + bend, _trimmed(parts, middle), rest)
     return _with_corners(function, middles, moved, slopes, made)
 
 
