@@ -41,6 +41,7 @@ def parser() -> argparse.ArgumentParser:
     _add_lines(commands)
     _add_audit(commands)
     _add_verify(commands)
+    _add_review(commands)
     return made
 
 
@@ -127,6 +128,24 @@ def _add_verify(commands: _Commands[argparse.ArgumentParser]) -> None:
         "prose too",
     )  # fmt: skip
     verify.add_argument("--json", action="store_true", help="print JSON instead of text")
+
+
+def _add_review(commands: _Commands[argparse.ArgumentParser]) -> None:
+    review = commands.add_parser(
+        "review",
+        help="how the review of a calc stands; merge the files of two reviewers, sign off",
+        description="Show how a review stands against its calc: lines marked, marks older than a "
+        "change and what has changed, findings, conflicts. Exit code 1 while anything stands open. "
+        "Marks are made in the HTML package: open it in a browser and choose Review.",
+    )
+    review.add_argument("calc", type=Path, metavar="CALC", help="notebook, PDF, HTML or record")
+    review.add_argument(
+        "--marks", type=Path, nargs="+", metavar="FILE",
+        help="files of reviewers (default: the .review.json beside CALC)",
+    )  # fmt: skip
+    review.add_argument("--merge", type=Path, metavar="OUT", help="write all marks into one file")
+    review.add_argument("--sign", metavar="NAME", help="sign off, if nothing stands open")
+    review.add_argument("--on", metavar="DATE", help="day of the sign-off (default: today)")
 
 
 def main(arguments: Sequence[str] | None = None) -> int:

@@ -12,8 +12,10 @@ from pathlib import Path
 from lineproof.cli.files import write_all
 from lineproof.cli.progress import Progress
 from lineproof.cli.rerun import Rerun, failed_checks, load_all, report_changes, rerun_all
+from lineproof.cli.review import review_beside
 from lineproof.errors import FaultList, UserError
 from lineproof.package.facts import PAPERS
+from lineproof.package.reviewed import PrintedReview
 
 DEFAULT_FOLDER = "issued"
 PACKAGE_NAME = "package"
@@ -93,7 +95,9 @@ def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Pat
     )
 
     package = build_package(
-        [rerun.calc.record for rerun in reruns], [rerun.calc.walk for rerun in reruns]
+        [rerun.calc.record for rerun in reruns],
+        [rerun.calc.walk for rerun in reruns],
+        reviews=_reviews(reruns),
     )
     if paper is not None:
         package = replace(package, facts=replace(package.facts, paper=PAPERS[paper]))
@@ -109,6 +113,27 @@ def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Pat
         _refuse_twice(rerun.calc.record.calc_id, own, printed)
         printed |= own
     return printed
+
+
+def _reviews(reruns: Sequence[Rerun]) -> list[PrintedReview | None]:
+    """Return what is printed of the review that lies beside each notebook, None for none."""
+    faults = FaultList()
+    made: list[PrintedReview | None] = []
+    for rerun in reruns:
+        record = rerun.calc.record
+        try:
+            review = review_beside(rerun.path, record)
+        except UserError as error:
+            faults.take(error)
+            continue
+        if review is None:
+            made.append(None)
+            continue
+        from lineproof.audit.review_print import printed_review  # noqa: PLC0415 - seldom needed
+
+        made.append(printed_review(review, record))
+    faults.raise_if_any()
+    return made
 
 
 def _refuse_twice(calc_id: str, own: Iterable[Path], others: Iterable[Path]) -> None:

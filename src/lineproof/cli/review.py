@@ -1,0 +1,178 @@
+"""``lineproof review``: how a review stands against its calc; merging files, signing off."""
+
+from __future__ import annotations
+
+import argparse
+import datetime as dt
+import sys
+from collections.abc import Iterable, Iterator, Sequence
+from functools import reduce
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from lineproof.cli.files import write_all
+from lineproof.cli.lines import LARGEST_FILE, MOST_NAMED, read_records
+from lineproof.errors import FaultList, UserError
+from lineproof.package.reviewed import REVIEW_SUFFIX
+from lineproof.record import Record
+from lineproof.typeset import printable
+
+if TYPE_CHECKING:
+    from lineproof.audit.review import Review
+    from lineproof.audit.review_marks import Standing
+    from lineproof.audit.review_merge import Merged
+
+
+def run(options: argparse.Namespace) -> int:
+    """Show how a review stands; returns 1 while anything stands open."""
+    from lineproof.audit.review_marks import sign, standing  # noqa: PLC0415 - 0.1 s
+
+    files = options.marks or [beside(options.calc)]
+    _check_places(options, files)
+    records = read_records(options.calc)
+    made = _merged(files)
+    review = made.review
+    record = _record_of(review, records, options.calc)
+    _refuse(review, record)
+    if options.sign:
+        review = sign(review, record, options.sign, options.on or _today())
+    if options.merge or options.sign:
+        place = options.merge or files[0]
+        write_all({place: review.to_text().encode()})
+        sys.stdout.write(f"{place}\n")
+    stands = standing(review, record)
+    told = [*_told(review, record, stands), *_merge_conflicts(made, stands)]
+    sys.stdout.writelines(f"{printable(line)}\n" for line in told)
+    return 1 if stands.open_items or made.conflicts else 0
+
+
+def beside(calc: Path) -> Path:
+    """Return where the review of a calc lies: beside it, under its name."""
+    return calc.with_name(f"{calc.stem}{REVIEW_SUFFIX}")
+
+
+def review_beside(calc: Path, record: Record) -> Review | None:
+    """Return the review that lies beside a notebook, None for none; raises :class:`UserError`.
+
+    It is refused where it is of another calc, or where the checker is the originator.
+    """
+    path = beside(calc)
+    if not path.is_file():
+        return None
+    review = _read(path)
+    if review.calc != record.calc_id:
+        raise UserError(
+            f"{path}: the review is of calc {review.calc[:40]!r}, not of {record.calc_id!r}; move "
+            "it away, or put the right one there"
+        )
+    _refuse(review, record)
+    return review
+
+
+def _check_places(options: argparse.Namespace, files: Sequence[Path]) -> None:
+    """Refuse, before anything is read, what could lose marks at the end."""
+    faults = FaultList()
+    out = options.merge
+    if out is not None and out.exists() and out.resolve() not in [file.resolve() for file in files]:
+        faults.add(f"{out}: exists and would be lost; name it behind --marks too, or give another")
+    if options.sign and out is None and len(files) > 1:
+        faults.add(f"--sign: {len(files)} files of marks; say with --merge OUT where they go")
+    if options.on and not options.sign:
+        faults.add("--on is the day of a sign-off; give --sign NAME with it")
+    faults.raise_if_any()
+
+
+def _merged(files: Sequence[Path]) -> Merged:
+    """Read all files and make one review of them; raises with the faults of all."""
+    from lineproof.audit.review_merge import Merged, conflicts, merge  # noqa: PLC0415 - as in run
+
+    faults, reviews = FaultList(), []
+    for path in files:
+        try:
+            reviews.append(_read(path))
+        except UserError as error:
+            faults.take(error)
+    faults.raise_if_any()
+
+    def join(made: Merged, review: Review) -> Merged:
+        both = merge(made.review, review)
+        return Merged(both.review, tuple(dict.fromkeys((*made.conflicts, *both.conflicts))))
+
+    first = reviews[0]
+    return reduce(join, reviews[1:], Merged(first, conflicts(first)))
+
+
+def _read(path: Path) -> Review:
+    from lineproof.audit.review_read import read_review  # noqa: PLC0415 - as in run
+
+    try:
+        with path.open("rb") as stream:
+            content = stream.read(LARGEST_FILE + 1)
+        text = content.decode("utf-8-sig")
+    except FileNotFoundError:
+        raise UserError(
+            f"{path}: no such file; open the HTML package in a browser, choose Review, mark lines, "
+            "and save the file there, or name it with --marks FILE"
+        ) from None
+    except OSError as error:
+        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
+    except UnicodeDecodeError:
+        raise UserError(
+            f"{path}: not UTF-8 text; give the file that the review page saved"
+        ) from None
+    try:
+        return read_review(text)
+    except UserError as error:
+        raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
+
+
+def _record_of(review: Review, records: Sequence[Record], path: Path) -> Record:
+    for record in records:
+        if record.calc_id == review.calc:
+            return record
+    held = ", ".join(record.calc_id for record in records)
+    raise UserError(f"{path}: holds {held}, but the review is of calc {review.calc[:40]!r}")
+
+
+def _refuse(review: Review, record: Record) -> None:
+    from lineproof.audit.review_marks import refused_reviewers  # noqa: PLC0415 - as in run
+
+    faults = refused_reviewers(review, record)
+    if faults:
+        raise UserError(faults)
+
+
+def _today() -> str:
+    return dt.datetime.now(tz=dt.UTC).astimezone().date().isoformat()
+
+
+def _told(review: Review, record: Record, stands: Standing) -> Iterator[str]:
+    """Give the state of a review, a line each."""
+    from lineproof.audit.review_print import printed_review  # noqa: PLC0415 - as in run
+
+    printed = printed_review(review, record)
+    yield f"{record.calc_id}: record {record.digest}, reviewed by {printed.reviewers or 'nobody'}"
+    yield f"  {printed.summary}"
+    for name, ids in (("not marked", stands.unmarked), ("queried", stands.queried)):
+        if ids:
+            yield f"  {name}: {_labels(record, ids)}"
+    for stale in printed.stale:
+        lines = ", ".join(label for _, label in stale.lines[:MOST_NAMED])
+        more = f" and {len(stale.lines) - MOST_NAMED} more" * (len(stale.lines) > MOST_NAMED)
+        yield f"  stale: {stale.why} {stale.marks}: {lines}{more}{stale.more}"
+    for found in printed.findings:
+        yield f"  finding {found.number}, {found.severity}, {found.standing}: {found.text}"
+    for sentence in (*printed.conflicts, *printed.signed):
+        yield f"  {sentence}"
+
+
+def _labels(record: Record, ids: Iterable[str]) -> str:
+    labels = [record.entries[line]["label"] or line for line in ids]
+    more = f" and {len(labels) - MOST_NAMED} more" if len(labels) > MOST_NAMED else ""
+    return ", ".join(labels[:MOST_NAMED]) + more
+
+
+def _merge_conflicts(made: Merged, stands: Standing) -> Iterator[str]:
+    """Give what only the merging could see: numbers given anew, fields that differed."""
+    known = {conflict.sentence for conflict in stands.conflicts}
+    yield from (f"  {each.sentence}" for each in made.conflicts if each.sentence not in known)
