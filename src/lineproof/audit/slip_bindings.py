@@ -9,15 +9,22 @@ from typing import NamedTuple
 
 from lineproof.audit.slip_constants import BARS, BY_SYMBOL, GRADES, ROWS
 from lineproof.audit.slip_digits import changed, swapped, written
-from lineproof.audit.slip_edits import Edit, Line, words_of
+from lineproof.audit.slip_edits import TOP, Edit, Line, words_of
 from lineproof.audit.slip_kinship import PAIRS, PARTNERS, SERVICE
 from lineproof.audit.slip_scope import LOADS, is_next
+from lineproof.audit.slip_tree import FAILURES, real
+from lineproof.errors import UserError
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import UNITS, internal_factor
 from lineproof.record.entry import GIVEN, LOOKUP
 
 FACTORS_OF_LOADS = (1.25, 1.5, 1.4)
 NEAR_ONE = 1e-6
+OF_FOUND = frozenset((
+    "pair", "mirror", "clear span", "service", "factored", "tributary", "edition", "unit",
+    "swapped", "bar count", "legs", "diameter", "bar size",
+))  # fmt: skip
+"""Families tried in the arguments of a found value, each at the cost of a run."""
 UNITS_BY_KIND: dict[str, tuple[tuple[float, str, str], ...]] = {
     "mm": ((1e-3, "unit", "mm in m"), (1e3, "unit", "m in mm"), (10, "unit", "cm in mm"),
            (0.1, "unit", "mm in cm"), (25.4, "other unit", "inches for mm"),
@@ -78,6 +85,22 @@ def edits_of_bindings(line: Line) -> Iterator[Edit]:
                 yield Edit(other.family, places, other.value, other.half, other.words, far)
 
 
+def edits_of_arguments(line: Line) -> Iterator[Edit]:
+    """Give the edits of a found value: its procedure run with another value for one argument."""
+    named = {name: line.pairs[target][0] for name, target in line.node.args.items()}
+    value, half = line.pair(0)
+    relative = half / abs(value) if value else 0.0
+    for name, target in line.node.args.items():
+        for other in others_for(line, target, name):
+            if other.family not in OF_FOUND:
+                continue
+            try:
+                made = real(line.node.compute(named | {name: other.value}))
+            except (*FAILURES, UserError):
+                continue
+            yield Edit(other.family, TOP, made, abs(made) * relative, other.words, other.far)
+
+
 def others_for(line: Line, target: str, name: str = "") -> Iterator[Other]:
     """Give the values that may stand by a slip where ``target`` belongs."""
     yield from _quantities(line, target, name)
@@ -117,6 +140,7 @@ def _quantities(line: Line, target: str, name: str) -> Iterator[Other]:
     near = [*scope.near(line.node.part, unit), *scope.kin(target)]
     for partners in {PARTNERS.get(scope.stems[target], ()), PARTNERS.get(name, ())}:
         near += scope.same_span(line.node.part, partners)
+        near += scope.same_span("", partners)
     for other in near:
         if other in seen or scope.units[other] != unit:
             continue
@@ -185,7 +209,7 @@ def _bars(line: Line, target: str, name: str) -> Iterator[Other]:
     elif symbol.startswith("d_b") and unit == "mm":
         yield from _diameters(value, other)
     elif symbol.startswith("A_") and unit == "mm2" and not symbol.startswith(("A_g", "A_e")):
-        yield from _areas(line, target, value, other)
+        yield from _areas(line, target, name, other)
 
 
 def _diameters(value: float, other: Callable[[str, float, str], Other]) -> Iterator[Other]:
@@ -199,9 +223,9 @@ def _diameters(value: float, other: Callable[[str, float, str], Other]) -> Itera
 
 
 def _areas(
-    line: Line, target: str, value: float, other: Callable[[str, float, str], Other]
+    line: Line, target: str, name: str, other: Callable[[str, float, str], Other]
 ) -> Iterator[Other]:
-    symbol = line.scope.symbols[target]
+    symbol, value = line.scope.symbols[target], line.pairs[target][0]
     for size, diameter, area in BARS:
         if line.scope.graph[target].kind != LOOKUP:
             break
@@ -212,7 +236,7 @@ def _areas(
             yield other("diameter", math.pi * diameter**2, ", the diameter for the radius")
         else:
             yield other("bar size", area, f", a bar {size}")
-    if symbol in ("A_v", "A_tr", "A_h"):
+    if symbol in ("A_v", "A_tr", "A_h") or name == "A_v":
         yield other("legs", value / 2, ", half of the legs")
         yield other("legs", value * 2, ", twice the legs")
         yield other("diameter", value * 4, ", the diameter for the radius")
@@ -279,8 +303,8 @@ def _loads(line: Line, target: str, name: str) -> Iterator[Other]:
         yield Other("centreline", 0.0, 0.0, said)
     if scope.units[target] in LOADS[:3]:
         for factor in FACTORS_OF_LOADS:
-            yield other("load factor", factor, f", factored by {factor:g}")
-            yield other("load factor", 1 / factor, f", its factor {factor:g} taken out")
+            yield other("factored", factor, f", factored by {factor:g}")
+            yield other("factored", 1 / factor, f", its factor {factor:g} taken out")
     for other_id in scope.same_span(line.node.part, SERVICE.get(scope.stems[target], ())):
         if other_id != target:
             yield _other(line, "service", other_id, target, name, 0.0)

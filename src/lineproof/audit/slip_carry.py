@@ -13,7 +13,7 @@ from lineproof.errors import UserError
 
 STRAIGHT = 1e-9
 """A way bent by less than this part of its values counts as straight."""
-MOST_LINES = 40
+MOST_LINES = 60
 """So many unclaimed lines above a claim are searched, the nearest first."""
 MOST_FOUND = 2000
 """So many found values are kept while one table of claims is searched."""

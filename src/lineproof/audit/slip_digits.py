@@ -47,4 +47,6 @@ def _places(number: str) -> list[int]:
     mantissa = re.split("[eE]", number)[0]
     digits = [at for at, sign in enumerate(mantissa) if sign.isdigit()]
     first = next((k for k, at in enumerate(digits) if mantissa[at] != "0"), 0)
+    if mantissa.lstrip("-")[:1] == "0" and mantissa.lstrip("-")[1:2].isdigit():
+        first = 0  # 024 is itself a slip, most likely of 204
     return digits[first : first + MOST]

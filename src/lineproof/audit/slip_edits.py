@@ -15,6 +15,8 @@ from lineproof.audit.slip_scope import LOADS, Pairs, Scope
 from lineproof.audit.slip_tree import OPERATIONS, Place, Places, text_of
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
+TOP = (0,)
+"""The place of the result."""
 LOAD_FACTORS = ("1.25", "1.5", "1.4", "0.9")
 SUM, PRODUCT = ("+", "-"), ("*", "/")
 

@@ -39,9 +39,11 @@ FAMILIES: dict[str, Family] = {
     "function": Family("other function of the angle", 0.3),
     # loads
     "load factor": Family("load factor", 0.8),
+    "factored": Family("load factor", 0.4),
     "service": Family("factored for service", 1.0),
     "tributary": Family("half or full tributary width", 1.0),
-    "simple span": Family("simple span for continuous", 1.0),
+    "simple span": Family("simple span for continuous", 1.2),
+    "coefficient": Family("coefficient in place of the analysis", 0.4),
     "centreline": Family("centreline for face", 1.0),
     # constants
     "edition": Family("constant of another edition or standard", 1.0),

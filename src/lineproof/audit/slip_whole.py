@@ -9,18 +9,19 @@ from functools import partial
 from lineproof.audit.data import Claim, read_from
 from lineproof.audit.slip_bindings import others_for, shown, ways_of_units
 from lineproof.audit.slip_digits import changed, swapped, written
-from lineproof.audit.slip_edits import Edit, Line, words_of
+from lineproof.audit.slip_edits import TOP, Edit, Line, words_of
 from lineproof.audit.slip_scope import LOADS, is_next
 from lineproof.errors import UserError
 from lineproof.quantity.units import internal_factor
 
-TOP = (0,)
+BY_ONE = 1.0
+"""A last digit that is one off was hardly mistyped."""
 OF_MOMENT = (8, 12, 10, 11, 14, 16, 9, 24, 2, 4)
 """Divisors of w l^2: simple span first, then fixed ends, coefficients of 9.3.3, cantilever."""
 OF_SHEAR = ((0.5, "/2"), (0.575, "*1.15/2"), (0.625, "*5/8"), (0.375, "*3/8"))
 OWN = frozenset((
     "tributary", "edition", "table row", "grade", "bar size", "diameter", "bar count", "legs",
-    "service", "load factor",
+    "service", "factored",
 ))  # fmt: skip
 """Families of :func:`others_for` that also serve for the result itself."""
 
@@ -30,7 +31,7 @@ def edits_of_result(line: Line) -> Iterator[Edit]:
     yield from _rows(line)
     yield from _moments(line)
     for other in others_for(line, line.node.id):
-        if other.family in OWN and not (other.family == "load factor" and line.node.tree is None):
+        if other.family in OWN and not (other.family == "factored" and line.node.tree is None):
             yield Edit(other.family, TOP, other.value, other.half, other.words, other.far)
     yield from _factored(line)
 
@@ -87,9 +88,8 @@ def _moments(line: Line) -> Iterator[Edit]:
             relative = (half_w / abs(w) if w else 0.0) + 2 * half_l / l if l else 0.0
             for value, text in _simple(unit, w, l):
                 words = partial(_by_simple, line, load, span, text)
-                far = 0.0 if text in ("**2/8", "/2") else 1.0
-                spread = value * relative
-                yield Edit("simple span", TOP, sign * value, abs(spread), words, far)
+                family = "simple span" if text in ("**2/8", "/2") else "coefficient"
+                yield Edit(family, TOP, sign * value, abs(value * relative), words)
 
 
 def _simple(unit: str, w: float, l: float) -> Iterator[tuple[float, str]]:
@@ -170,6 +170,14 @@ def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
                 continue
             if interval.low - half <= value <= interval.high + half:
                 words = partial("the result {} written as {}".format, meant, number)
+                last = _by_one_in_the_last(meant, number)
                 # What the claim would be if the line's own value had met the same slip.
                 off = value - interval.middle
-                yield Edit(family, TOP, claim.value + off, half, words)
+                yield Edit(family, TOP, claim.value + off, half, words, BY_ONE if last else 0.0)
+
+
+def _by_one_in_the_last(first: str, second: str) -> bool:
+    """Tell whether two numbers differ by one in their last digit: that is rounding as a rule."""
+    changed = sum(a != b for a, b in zip(first, second, strict=True))
+    digits = (first.rstrip("0") or "0")[-1], (second.rstrip("0") or "0")[-1]
+    return changed == 1 and first[-1] != second[-1] and abs(ord(digits[0]) - ord(digits[1])) == 1

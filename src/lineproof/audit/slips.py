@@ -8,13 +8,13 @@ from dataclasses import dataclass, field
 
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.audit.graph import Graph
-from lineproof.audit.slip_bindings import edits_of_bindings, others_for
+from lineproof.audit.slip_bindings import edits_of_arguments, edits_of_bindings, others_for
 from lineproof.audit.slip_carry import Carrier, Onward, fitting, reach_of
-from lineproof.audit.slip_edits import Edit, Line, edits_of, words_of
+from lineproof.audit.slip_edits import TOP, Edit, Line, edits_of, words_of
 from lineproof.audit.slip_rank import Fit, ranked, shares
 from lineproof.audit.slip_scope import Pairs, Scope, scope_of
 from lineproof.audit.slip_tree import FAILURES, Places
-from lineproof.audit.slip_whole import TOP, edits_of_copy, edits_of_result
+from lineproof.audit.slip_whole import edits_of_copy, edits_of_result
 
 FARTHER = 0.25
 """By so much (natural logarithm) a slip is less likely for each line it lies further up."""
@@ -144,15 +144,21 @@ def _line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
 
 def _own(line: Line, claim: Claim) -> Tried:
     """Return the edits of the claimed line itself."""
-    edits = [*edits_of(line), *edits_of_bindings(line)] if line.node.tree is not None else []
-    return _tried(line, [*edits, *edits_of_result(line), *edits_of_copy(line, claim)])
+    edits = [*_inside(line), *edits_of_result(line), *edits_of_copy(line, claim)]
+    return _tried(line, edits)
+
+
+def _inside(line: Line) -> list[Edit]:
+    """Return the edits of a line's formula and arguments; a given has none."""
+    if line.node.tree is not None:
+        return [*edits_of(line), *edits_of_bindings(line)]
+    return list(edits_of_arguments(line)) if line.node.is_computed else []
 
 
 def _above(line: Line) -> Tried:
     """Return the edits of an unclaimed line, a given or a looked-up value above a claim."""
     if line.node.is_computed:
-        inside = [*edits_of(line), *edits_of_bindings(line)] if line.node.tree is not None else []
-        edits = [*inside, *edits_of_result(line)]
+        edits = [*_inside(line), *edits_of_result(line)]
     else:
         edits = [
             Edit(other.family, TOP, other.value, other.half, other.words, other.far)
