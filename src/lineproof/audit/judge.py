@@ -127,6 +127,9 @@ class _Judge:
         made = Judged(node.id, Verdict.AGREES, claim, point, right)
         if claim.stands_for.holds(right):
             return made
+        other = self._other_way(node, claim)
+        if other is not None:
+            return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
         slip = unit_slip(claim, [point])
         said = f"the calc has {self._shown(node, right)}"
         if slip is not None:
@@ -172,9 +175,9 @@ class _Judge:
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
-        for other in chain.from_iterable(other_ways(bench, node) for bench in self.benches):
-            if claim.stands_for.meets(other.interval):
-                return replace(made, verdict=Verdict.OTHER_METHOD, note=other.sentence)
+        other = self._other_way(node, claim)
+        if other is not None:
+            return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
         rounded = coarse_rounding(claim, around)
         if rounded is not None:
             return self._rounded(node, claim, made, rounded)
@@ -183,6 +186,12 @@ class _Judge:
             note = f"{self._turns(turned[-1])}, so that other expressions apply to this line"
             return replace(made, verdict=Verdict.UNKNOWN, note=note, causes=self._causes(node))
         return replace(made, verdict=Verdict.ORIGIN, slips=self._slips(node, claim))
+
+    def _other_way(self, node: Node, claim: Claim) -> str | None:
+        """Return the sentence of the other valid way that gives a claim, if one does."""
+        ways = chain.from_iterable(other_ways(bench, node) for bench in self.benches)
+        met = (way.sentence for way in ways if claim.stands_for.meets(way.interval))
+        return next(met, None)
 
     def _turns(self, decision: str) -> str:
         node = self.graph[decision]

@@ -76,18 +76,23 @@ class Bench:
         return self.world.used.get(f"{node.part}/{symbol}")
 
     def above(self, node: Node, symbols: tuple[str, ...]) -> Form | None:
-        """Return the form of the first of some names that a line, or what it rests on, uses."""
-        near = [node, *(self.graph[i] for i in reversed(self.graph.above([node.id])))]
+        """Return the form of the first of some names that a line, or what it rests on, uses.
+
+        Looked for in the line, in those that it names, and in those above in the same part.
+        """
+        above = [self.graph[i] for i in reversed(self.graph.above([node.id]))]
+        named = set(node.args.values())
+        near = [node, *(n for n in above if n.id in named or n.part == node.part)]
         for symbol in symbols:
             for user in near:
-                if user.part == node.part and symbol in user.args:
+                if symbol in user.args:
                     return self.world.used[user.args[symbol]]
         return None
 
 
 def other_ways(bench: Bench, node: Node) -> Iterator[Other]:
     """Give what every other way to a line's value gives; ways that do not apply give nothing."""
-    for way in _WAYS:
+    for way in _WAYS if node.is_computed else (_shear,):
         try:
             yield from way(bench, node)
         except _CANNOT:
@@ -98,9 +103,9 @@ def _shear(bench: Bench, node: Node) -> Iterator[Other]:
     swapped = _recorded_pairs(bench, node) or _simplified(bench, node)
     if not swapped:
         return
-    changed = next(iter(swapped))
-    part = changed.split("/", maxsplit=1)[0]
-    general = bench.graph[f"{part}/beta"].kind == LOOKUP
+    part = bench.graph[next(iter(swapped))].part
+    factor = bench.graph.nodes.get(f"{part}/beta")
+    general = factor is not None and factor.kind == LOOKUP
     name = "general method of 11.3.6.4" if general else "simplified method of 11.3.6.3"
     yield Other(
         f"follows by the {name}, which the standard allows as well",
@@ -108,16 +113,16 @@ def _shear(bench: Bench, node: Node) -> Iterator[Other]:
     )
 
 
-def _parts_above(bench: Bench, node: Node, symbol: str) -> Iterator[str]:
+def _parts_above(bench: Bench, node: Node, *symbols: str) -> Iterator[str]:
     """Give the parts in which a line or what it rests on holds a symbol, the nearest first."""
     for entry_id in (node.id, *reversed(bench.graph.above([node.id]))):
         other = bench.graph[entry_id]
-        if other.symbol == symbol and other.has_value:
+        if other.symbol in symbols and other.has_value:
             yield other.part
 
 
 def _recorded_pairs(bench: Bench, node: Node) -> dict[str, Form]:
-    for part in _parts_above(bench, node, "beta"):
+    for part in _parts_above(bench, node, "beta", "theta"):
         if f"{part}/beta_g" in bench.graph.nodes:
             return {
                 f"{part}/{mine}": bench.world.used[f"{part}/{other}"]
@@ -129,15 +134,15 @@ def _recorded_pairs(bench: Bench, node: Node) -> dict[str, Form]:
 
 def _simplified(bench: Bench, node: Node) -> dict[str, Form]:
     """Return beta and theta of the simplified method where the record has the general one alone."""
-    for part in _parts_above(bench, node, "beta"):
-        beta = bench.graph[f"{part}/beta"]
+    for part in _parts_above(bench, node, "beta", "theta"):
+        beta = bench.graph.nodes.get(f"{part}/beta")
         strengths = [bench.above(bench.graph[node.id], (s,)) for s in ("f_y", "f_c")]
         limits = (_SIMPLIFIED_YIELD, _SIMPLIFIED_CONCRETE)
         within = all(
             form is None or form.middle <= most
             for form, most in zip(strengths, limits, strict=True)
         )
-        with_stirrups = beta.kind == LINE and "s_ze" not in beta.args
+        with_stirrups = beta is not None and beta.kind == LINE and "s_ze" not in beta.args
         if within and with_stirrups:
             return {
                 f"{part}/{symbol}": Form(value)
