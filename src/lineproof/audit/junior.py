@@ -21,6 +21,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 
+import lineproof.beams  # noqa: F401 - registers the procedures that found values name
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.junior_cells import LONGEST_CELL, MOST_CELLS, MOST_CHARACTERS, Cell
 from lineproof.audit.junior_code import code_findings, recorded_findings

@@ -11,7 +11,7 @@ from functools import cache
 from itertools import islice
 
 from lineproof.audit.junior_edits import ONE, branches, replaced
-from lineproof.audit.junior_naming import Named, named_difference
+from lineproof.audit.junior_naming import PLAINEST, Named, named_difference
 from lineproof.audit.junior_sample import (
     Values,
     constant_ratio,
@@ -28,12 +28,13 @@ STANDS_FOR = {"b": ("b_w", "b_f"), "b_w": ("b",)}
 """Symbols of the catalogue and what a hand formula may call them."""
 _SAME_THING = ("b_t", "b_tr")
 """Symbols whose formula names another symbol only, and which may be written out by it."""
-LIKE = 0.4
+LIKE = 0.3
 """Share of symbols in common from which a formula is compared in words."""
 _MOST_FORMS = 40
 _LARGEST = 150
 _DEGREES_IN_RADIAN = 57.29577951308232
 _MOST_NAMED = 4
+_CLOSE = 0.5
 _PROVABLE = 90
 _INDEX = re.compile(r"_?[0-9]{1,2}\Z")
 
@@ -107,7 +108,8 @@ def compared(
     if scales:
         tree = _without_conversions(tree, known)
     pairs = sorted(
-        (_nearest_form(tree, formula) for formula in known), key=lambda pair: -likeness(*pair[:2])
+        (pair for formula in known for pair in _nearest_forms(tree, formula)),
+        key=lambda pair: -likeness(*pair[:2]),
     )
     best: tuple[Formula, Named] | None = None
     for mine, theirs, formula in pairs[:_MOST_NAMED]:
@@ -116,6 +118,8 @@ def compared(
         told = named_difference(mine, theirs, units or {})
         if best is None or told.cost < best[1].cost:
             best = formula, told
+        if best[1].cost <= PLAINEST:
+            break
     if best is None:
         return Compared(Said.UNLIKE, pairs[0][2])
     formula, told = best
@@ -141,14 +145,15 @@ def _is_conversion(number: float) -> bool:
     return power is not None and abs(power) > 1
 
 
-def _nearest_form(tree: Tree, formula: Formula) -> tuple[Tree, Tree, Formula]:
-    """Return the hand's tree and the catalogue's, written out only where nothing is like it."""
+def _nearest_forms(tree: Tree, formula: Formula) -> Iterator[tuple[Tree, Tree, Formula]]:
+    """Give the hand's tree and the catalogue's, also with a symbol of one written out."""
     hand = _aligned(tree, formula.tree)
-    if likeness(hand, formula.tree) >= LIKE:
-        return hand, formula.tree, formula
-    forms = [(pair.mine, pair.theirs) for pair in _inlined(hand, formula.tree)]
-    mine, theirs = max(forms, key=lambda pair: likeness(*pair))
-    return mine, theirs, formula
+    yield hand, formula.tree, formula
+    if likeness(hand, formula.tree) < _CLOSE:
+        forms = [(pair.mine, pair.theirs) for pair in _inlined(hand, formula.tree)]
+        mine, theirs = max(forms, key=lambda pair: likeness(*pair))
+        if mine is not hand or theirs is not formula.tree:
+            yield mine, theirs, formula
 
 
 def likeness(tree: Tree, other: Tree) -> float:

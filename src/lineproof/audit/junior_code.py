@@ -24,7 +24,7 @@ from lineproof.quantity.units import UNITS, internal_factor, plain_spelling, uni
 from lineproof.record.entry import GIVEN, LOOKUP
 from lineproof.standards.catalogue import NOTATION
 
-MOST = 300
+MOST = 120
 """Assignments of a notebook that are compared with the catalogue."""
 _TURN = 2 * math.pi
 _SAME = 5e-4

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from itertools import islice, permutations
 
@@ -14,13 +14,15 @@ from lineproof.audit.junior_sample import (
     points_for,
     sampled,
 )
-from lineproof.formula import Name, Number, Tree, names_of
-from lineproof.formula.tree import numbers_of
+from lineproof.formula import Call, Name, Number, Tree, names_of
+from lineproof.formula.tree import numbers_of, walk
 from lineproof.quantity.units import UNITS
 from lineproof.standards.catalogue import NOTATION
 
-MOST_TRIALS = 500
+MOST_TRIALS = 300
 """Trials of edits for one pair of formulas, so that a long formula takes no longer than that."""
+PLAINEST = 12
+"""Cost of a difference in one thing: nothing plainer is looked for."""
 _MOST_CHOICES = 60
 _UNEXPLAINED = 100
 _MOST_EXCHANGED = 3
@@ -55,14 +57,29 @@ def named_difference(hand: Tree, theirs: Tree, units: Mapping[str, str]) -> Name
     points = points_for({*names_of(hand), *names_of(theirs)}, units)
     missing = tuple(n for n in names_of(theirs) if n not in names_of(hand))
     best: Named | None = None
-    for form in (theirs, *branches(theirs)):
-        for edit in islice(_edits(hand, form, units), MOST_TRIALS):
+    left = MOST_TRIALS
+    for form in (theirs, *_like(branches(theirs), hand)):
+        share = MOST_TRIALS if form is theirs else min(MOST_TRIALS // 4, left)
+        for edit in islice(_edits(hand, form, units), share):
             told = _told(edit, points, limited=form is not theirs)
             if told is not None and (best is None or told.cost < best.cost):
                 best = told
+        if form is not theirs:
+            left -= share
+        if left <= 0 or (best is not None and best.cost <= PLAINEST):
+            break
     if best is not None:
         return replace(best, missing=missing)
     return Named(_by_names(hand, theirs), _UNEXPLAINED, missing)
+
+
+def _like(forms: Iterable[Tree], hand: Tree) -> list[Tree]:
+    """Return the forms that have as many limits as the hand's formula has."""
+    return [form for form in forms if _limits(form) == _limits(hand)]
+
+
+def _limits(tree: Tree) -> int:
+    return sum(isinstance(n, Call) and n.function in ("min", "max") for n in walk(tree))
 
 
 def _told(edit: _Edit, points: Mapping[str, Values], *, limited: bool) -> Named | None:

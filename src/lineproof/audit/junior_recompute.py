@@ -13,6 +13,7 @@ from lineproof.quantity.units import internal_factor, system_unit
 from lineproof.record import Record
 from lineproof.record.entry import CHECK, GIVEN, LOOKUP
 from lineproof.record.printed_checks import rounds_to
+from lineproof.record.procedures import recall
 from lineproof.record.recompute import Difference, close, recompute
 from lineproof.standards.catalogue import tables
 
@@ -24,7 +25,7 @@ def recomputed(record: Record) -> Iterator[Finding]:
     differences = recompute(record)
     again = {d.id: d for d in differences if d.what == "value"}
     graph = Graph(record)
-    wrong = [node for node in graph if node.has_value and _is_wrong(node, graph)]
+    wrong = [node for node in graph if node.id in again and _is_wrong(node, graph)]
     older: dict[str, list[str]] = {}
     for node in graph:
         for target in _changed_below(node, graph):
@@ -32,9 +33,14 @@ def recomputed(record: Record) -> Iterator[Finding]:
     stale = {entry_id for users in older.values() for entry_id in users}
     origins = [n for n in wrong if n.id not in stale]
     named = {node.id for node in origins}
+    unknown = [node for node in origins if _is_unknown(node)]
+    if unknown:
+        yield _not_known(unknown)
     for node in origins:
+        if node in unknown:
+            continue
         carried = [i for i in graph.below([node.id]) if i in again and i not in named]
-        yield _origin(node, again.get(node.id), older.get(node.id, []), carried)
+        yield _origin(node, again[node.id], older.get(node.id, []), carried)
     for target, users in older.items():
         if target not in named:
             yield _older(graph[target], users)
@@ -76,16 +82,33 @@ def _own_value(node: Node, graph: Graph) -> float:
     return node.compute(graph.named(node, graph.stored))
 
 
-def _origin(
-    node: Node, difference: Difference | None, users: list[str], carried: list[str]
-) -> Finding:
+def _is_unknown(node: Node) -> bool:
+    made = node.entry.get("procedure")
+    return made is not None and recall(made["name"], made["version"]) is None
+
+
+def _not_known(nodes: list[Node]) -> Finding:
+    procedures = dict.fromkeys(
+        f"{n.entry['procedure']['name']} of version {n.entry['procedure']['version']}"
+        for n in nodes
+    )  # fmt: skip
+    return finding(
+        Severity.MAJOR,
+        f"{listed(name_of(node) for node in nodes)} cannot be worked again: "
+        f"{listed(procedures, 3)} is not known here",
+        [node.id for node in nodes],
+        advice="audit it with the version that made it, or confirm the closing criterion by hand",
+    )
+
+
+def _origin(node: Node, difference: Difference, users: list[str], carried: list[str]) -> Finding:
     unit = f" {node.unit}".rstrip()
     stored = f"{node.entry['value']:.10g}{unit}"
     follows = f"; {listed(carried)} follow from it" if carried else ""
     if users:
         follows += f"; {listed(users)} {'was' if len(users) == 1 else 'were'} worked with another"
     ids = dict.fromkeys([node.id, *users, *carried])
-    gives = difference.recomputed if difference is not None else "another value"
+    gives = difference.recomputed
     if gives.startswith("failed"):
         reason = gives.removeprefix("failed: ")[:120]
         return finding(
@@ -95,7 +118,7 @@ def _origin(
             advice="work the line by hand, or with the version that made the record",
         )
     source = {GIVEN: "was typed", LOOKUP: "is printed"}.get(node.kind)
-    gives += "" if difference is None else unit
+    gives += unit
     why = f"{gives} {source}" if source else f"its formula and the values that it uses give {gives}"
     return finding(
         Severity.CRITICAL,

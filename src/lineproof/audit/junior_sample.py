@@ -7,7 +7,9 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterable, Iterator, Mapping
+from functools import reduce
 from itertools import count
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -78,10 +80,10 @@ def sampled(tree: Tree, points: Mapping[str, Values]) -> Values:
         return np.broadcast_to(_value(tree, points), (POINTS,)).astype(float)
 
 
-def _value(tree: Tree, points: Mapping[str, Values]) -> Values:
+def _value(tree: Tree, points: Mapping[str, Values]) -> Any:
     match tree:
         case Number(text):
-            return np.full(POINTS, float(text))
+            return np.float64(text)
         case Name(name):
             return points[name]
         case Negative(of):
@@ -92,22 +94,22 @@ def _value(tree: Tree, points: Mapping[str, Values]) -> Values:
             return _FUNCTIONS[function](*[_value(arg, points) for arg in args])
 
 
-def _power(base: Values, exponent: Values) -> Values:
+def _power(base: Any, exponent: Any) -> Any:
     # An exponent of a hand's formula may be anything: beyond this it is no formula of ours.
-    small = np.where(np.abs(exponent) <= _LARGEST_POWER, exponent, np.nan)
-    powered: Values = np.power(base, small)
-    return powered
+    if np.ndim(exponent) == 0:
+        return np.power(base, exponent) if abs(exponent) <= _LARGEST_POWER else np.nan
+    return np.power(base, np.where(np.abs(exponent) <= _LARGEST_POWER, exponent, np.nan))
 
 
-_BINARY: dict[str, Callable[[Values, Values], Values]] = {
+_BINARY: dict[str, Callable[[Any, Any], Any]] = {
     "+": np.add, "-": np.subtract, "*": np.multiply, "/": np.divide, "**": _power,
 }  # fmt: skip
-_FUNCTIONS: dict[str, Callable[..., Values]] = {
+_FUNCTIONS: dict[str, Callable[..., Any]] = {
     "sqrt": np.sqrt,
     "cbrt": lambda x: np.where(x < 0, np.nan, np.cbrt(x)),
     "abs": np.abs,
-    "min": lambda *args: np.min(np.array(args), axis=0),
-    "max": lambda *args: np.max(np.array(args), axis=0),
+    "min": lambda *args: reduce(np.minimum, args),
+    "max": lambda *args: reduce(np.maximum, args),
     "sin": lambda x: np.sin(np.radians(x)),
     "cos": lambda x: np.cos(np.radians(x)),
     "tan": lambda x: np.tan(np.radians(x)),
