@@ -67,10 +67,11 @@ def _many(number: int, one: str, many: str) -> str:
 
 def _finding(number: int, finding: Finding) -> Iterator[str]:
     clause = f" [{finding.clause}]" if finding.clause else ""
-    place = f"{finding.ids[0]}: " if finding.ids else ""
+    told = not finding.ids or finding.ids[0] in finding.what
+    place = "" if told else f"{finding.ids[0]}: "
     yield f"{number:4}  {place}{finding.what}{clause}"
     if finding.advice:
-        yield f"      {finding.advice}"
+        yield f"      {finding.advice[:1].upper()}{finding.advice[1:]}"
     for effect in finding.effects[:MOST_EFFECTS]:
         yield f"      - {effect.sentence}"
     if len(finding.effects) > MOST_EFFECTS:

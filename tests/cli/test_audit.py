@@ -1,0 +1,245 @@
+"""The command audit: claims against a record by hand (tests/audit/hand.py), blanks, exit codes."""
+
+from __future__ import annotations
+
+import csv
+import json
+import subprocess
+import sys
+from pathlib import Path
+from typing import Any
+
+import pytest
+from openpyxl import load_workbook
+from tests.audit.hand import beam as hand_beam
+
+from lineproof.cli import main
+from lineproof.cli.audit import picked
+from lineproof.errors import UserError
+
+Capture = pytest.CaptureFixture[str]
+Notebook = dict[str, Any]
+
+
+@pytest.fixture
+def record_file(tmp_path: Path) -> Path:
+    path = tmp_path / "beam.json"
+    path.write_text(hand_beam().to_text(), encoding="utf-8")
+    return path
+
+
+def claims(folder: Path, **values: str) -> Path:
+    """Write claims by symbol."""
+    path = folder / "claims.csv"
+    path.write_text("symbol,claimed\n" + "".join(f"{s},{v}\n" for s, v in values.items()))
+    return path
+
+
+def audit(*arguments: object) -> int:
+    return main(["audit", *map(str, arguments)])
+
+
+def test_claims_that_agree(record_file: Path, tmp_path: Path, capsys: Capture) -> None:
+    file = claims(tmp_path, d="539 mm", M_r="207 kN.m", M_f="180 kN.m")
+    assert audit(record_file, "--claims", file) == 0
+    said = capsys.readouterr().out.splitlines()
+    assert said[0].startswith("H1  Beam by hand  digest ")
+    assert said[1] == "3 claims: 3 agree; 17 lines not claimed"
+    assert said[2] == "no findings"
+
+
+def test_an_origin_with_slip_effects_and_what_carries_it(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    """h for d in M_r: 408 000 x (600 - 32.489) = 231.54 kN.m against 206.64.
+
+    The check M_f <= M_r: 180/231.5 = 0.777 as claimed, 180/206.6 = 0.871 with the right value.
+    """
+    file = claims(tmp_path, d="539 mm", a="65.0 mm", M_r="231.5 kN.m", M_f="180 kN.m")
+    assert audit(record_file, "--claims", file) == 1
+    said = capsys.readouterr().out
+    assert "4 claims: 3 agree, 1 is the origin of an error; 16 lines not claimed" in said
+    assert "1 finding" in said.splitlines()
+    assert "major" in said.splitlines()
+    assert "strength/M_r: " in said
+    assert "231.5 kN.m does not follow from the values that the claim uses; 206.7 kN.m does" in said
+    assert "h (1." in said  # the slip finder's sentence names h
+    assert "utilisation from 0.78 as claimed to 0.87 with the right value, still holds" in said
+
+
+def test_findings_come_by_what_they_matter(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    """M_f 250 > 206.6 as claimed fails a check that holds; n_b 4 is right; f_y 300 hides nothing.
+
+    h = 900 makes M_r 329 as claimed: the check seems easier than it is, but holds either way.
+    """
+    file = claims(tmp_path, h="900 mm", w_f="20 kN/m", b="410 mm")
+    assert audit(record_file, "--claims", file, "--json") == 1
+    data = json.loads(capsys.readouterr().out)
+    order = [(f["severity"], f["ids"][0]) for f in data["findings"]]
+    assert order == [("major", "given/w_f"), ("major", "given/h"), ("major", "given/b")]
+    changes = [f["effects"][0]["right"] - f["effects"][0]["claimed"] for f in data["findings"]]
+    assert changes == sorted(changes, reverse=True)
+
+
+def test_a_claim_that_hides_a_failing_check_is_critical(tmp_path: Path, capsys: Capture) -> None:
+    """M_f = 60 x 36/8 = 270 > 206.6: fails; with w_f = 40 claimed it would hold."""
+    from tests.audit import hand  # noqa: PLC0415 - its givens are changed here
+
+    sheet = hand.sheet_of(givens=hand.GIVENS | {"w_f": "60 kN/m"})
+    with sheet.part("checks", "Span 1: checks"):
+        sheet.check("M_f <= M_r", key="strength", title="Moment resistance")
+    path = tmp_path / "beam.json"
+    path.write_text(sheet.close().to_text(), encoding="utf-8")
+    assert audit(path, "--claims", claims(tmp_path, w_f="40 kN/m"), "--json") == 1
+    (finding,) = json.loads(capsys.readouterr().out)["findings"]
+    assert finding["severity"] == "critical"
+    assert finding["effects"][0]["holds_as_claimed"] is True
+    assert finding["effects"][0]["holds"] is False
+
+
+def test_json_tells_every_claim(record_file: Path, tmp_path: Path, capsys: Capture) -> None:
+    """M_r 209 by K_r 1.8; d 535 rounded down."""
+    assert audit(record_file, "--claims", claims(tmp_path, d="535 mm"), "--json") == 0
+    data = json.loads(capsys.readouterr().out)
+    assert data["calc"] == "H1"
+    assert data["counts"] == {"conservative rounding": 1, "not claimed": 19}
+    (line,) = data["judged"]
+    assert (line["id"], line["claimed"], line["row"]) == ("beam/d", "535 mm", 2)
+    assert (line["unit"], line["right"]) == ("mm", pytest.approx(538.95))
+    assert line["follows"] == pytest.approx([538.95, 538.95])
+    assert audit(record_file, "--claims", claims(tmp_path, M_r="209 kN.m")) == 0
+    assert "K_r read from a table as 1.8" in capsys.readouterr().out
+
+
+@pytest.mark.parametrize(("option", "count"), [("--blank", 19), ("--blank-full", 20)])
+def test_a_blank_is_written_once(
+    record_file: Path, tmp_path: Path, capsys: Capture, option: str, count: int
+) -> None:
+    path = tmp_path / "blank.csv"
+    assert audit(record_file, option, path) == 0
+    assert "fill in the column 'claimed'" in capsys.readouterr().out
+    rows = list(csv.reader(path.read_text(encoding="utf-8-sig").splitlines()))
+    assert rows[0] == ["id", "label", "place", "symbol", "title", "unit", "claimed", "where"]
+    assert len(rows) - 1 == count
+    path.write_text("filled in by hand")
+    assert audit(record_file, option, path) == 2
+    assert "exists already and may hold claims" in capsys.readouterr().err
+    assert path.read_text() == "filled in by hand"
+
+
+def test_a_blank_workbook(record_file: Path, tmp_path: Path) -> None:
+    path = tmp_path / "blank.xlsx"
+    assert audit(record_file, "--blank", path) == 0
+    sheet = load_workbook(path).worksheets[0]
+    assert sheet["A1"].value == "id"
+    assert sheet["G2"].number_format == "@"
+    assert not list(tmp_path.glob(".*"))  # nothing half written is left
+
+
+@pytest.mark.parametrize(
+    ("arguments", "said"),
+    [
+        (["--blank", "blank.txt"], "write a name in .csv or .xlsx"),
+        (["--claims", "none.csv"], "none.csv: cannot be read"),
+        (["--claims", "beam.json"], "beam.json: neither .csv nor .xlsx"),
+        (["--calc", "B9"], "holds no calc 'B9'; write --calc with one of H1"),
+        (["--blank", "no/such/folder/blank.csv", "--calc", "B9"], "holds no calc 'B9'"),
+    ],
+)
+def test_wrong_input(
+    record_file: Path, tmp_path: Path, capsys: Capture, monkeypatch: pytest.MonkeyPatch,
+    arguments: list[str], said: str,
+) -> None:  # fmt: skip
+    monkeypatch.chdir(tmp_path)
+    before = sorted(path.name for path in tmp_path.iterdir())
+    assert audit(record_file, *arguments) == 2
+    assert said in capsys.readouterr().err
+    assert sorted(path.name for path in tmp_path.iterdir()) == before
+
+
+def test_claims_and_a_blank_are_not_asked_for_together(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    with pytest.raises(SystemExit) as stopped:
+        audit(record_file, "--blank", tmp_path / "b.csv", "--claims", tmp_path / "c.csv")
+    assert stopped.value.code == 2
+    assert "not allowed with" in capsys.readouterr().err
+
+
+def test_faults_of_claims_come_together(record_file: Path, tmp_path: Path, capsys: Capture) -> None:
+    file = claims(tmp_path, d="539", M_rr="1 mm", a="=1+1")
+    assert audit(record_file, "--claims", file) == 2
+    said = capsys.readouterr().err.splitlines()
+    assert len(said) == 3
+    assert all(line.startswith(f"{file}: row ") for line in said)
+
+
+def test_a_record_changed_by_hand_judges_nobody(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    """d stored as 545 while its formula gives 538.95."""
+    data = json.loads(record_file.read_text())
+    (part,) = [p for p in data["parts"] if p["key"] == "beam"]
+    (line,) = [e for e in part["entries"] if e["symbol"] == "d"]
+    line["value"] = 545.0
+    record_file.write_text(json.dumps(data))
+    assert audit(record_file, "--claims", claims(tmp_path, d="539 mm")) == 2
+    assert "does not follow from its own inputs (beam/d: " in capsys.readouterr().err
+    assert audit(record_file) == 1  # alone it is searched, and says so
+    assert "beam/d" in capsys.readouterr().out
+
+
+def test_several_calcs_in_one_package() -> None:
+    first, second = hand_beam(), hand_beam("a <= h_f")
+    second.data["calc"]["id"] = "H2"
+    path = Path("package.pdf")
+    assert picked([first, second], path, "H2") is second
+    with pytest.raises(UserError, match=r"holds 2 calcs \(H1, H2\); say which: --calc H1"):
+        picked([first, second], path, None)
+    with pytest.raises(UserError, match=r"holds the calc 'H1' 2 times"):
+        picked([first, first], path, "H1")
+
+
+def test_a_notebook_alone_and_against_claims(
+    beam_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    """The notebook of the tests has M_r = 456.1 kN.m (tests/conftest.py)."""
+    before = beam_file.read_bytes()
+    assert audit(beam_file, "--claims", claims(tmp_path, M_r="456 kN.m")) == 0
+    assert "1 claim: 1 agrees" in capsys.readouterr().out
+    assert audit(beam_file) == 1
+    said = capsys.readouterr().out
+    assert "Shear resistance is not checked. [11.3.1]" in said
+    assert "changed" not in said
+    assert beam_file.read_bytes() == before
+
+
+def test_a_cell_changed_after_its_run_is_found(
+    beam: Notebook, tmp_path: Path, capsys: Capture
+) -> None:
+    """A_s typed as 3000 under outputs that were made with 2500."""
+    source = beam["cells"][2]["source"]
+    beam["cells"][2]["source"] = "".join(source).replace("2500", "3000")
+    path = tmp_path / "beam.ipynb"
+    path.write_text(json.dumps(beam))
+    assert audit(path) == 1
+    said = capsys.readouterr().out
+    assert "was changed after it was run; run all cells, then save" in said
+    assert "cell 3 says A_s = '3000 mm2'; the record was made with 2500 mm2" in said
+
+
+def test_nothing_of_a_file_is_run(record_file: Path, tmp_path: Path) -> None:
+    """Text that looks like code stays text, in a fresh process."""
+    mark = tmp_path / "ran"
+    bad = f"__import__('pathlib').Path({str(mark)!r}).touch()"
+    file = tmp_path / "claims.csv"
+    file.write_text(f'symbol,claimed\n"{bad}",1\nd,"{bad}"\n')
+    done = subprocess.run(
+        [sys.executable, "-m", "lineproof", "audit", str(record_file), "--claims", str(file)],
+        capture_output=True, text=True, check=False,
+    )  # fmt: skip
+    assert done.returncode == 2
+    assert "Traceback" not in done.stderr
+    assert not mark.exists()
