@@ -40,6 +40,13 @@ class Pairs(dict[str, Pair]):
         super().__init__()
         self.stored, self.used = graph.stored, used
 
+    def copied(self) -> Pairs:
+        """Return a copy, in which a pair may be put without changing this one."""
+        other = Pairs.__new__(Pairs)
+        other.stored, other.used = self.stored, self.used
+        other.update(self)
+        return other
+
     def __missing__(self, entry_id: str) -> Pair:
         interval = self.used.get(entry_id)
         value = self.stored[entry_id] if interval is None else interval.middle

@@ -3,18 +3,19 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Container, Iterator, Mapping, Sequence
+from collections.abc import Callable, Container, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 
 from lineproof.audit.data import Claim, Interval, Slip
-from lineproof.audit.graph import Graph
+from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slip_bindings import edits_of_arguments, edits_of_bindings, others_for
 from lineproof.audit.slip_carry import Carrier, Onward, fitting, reach_of
 from lineproof.audit.slip_edits import TOP, Edit, Line, edits_of, words_of
 from lineproof.audit.slip_rank import Fit, ranked, shares
 from lineproof.audit.slip_scope import Pairs, Scope, scope_of
-from lineproof.audit.slip_tree import FAILURES, Places
+from lineproof.audit.slip_tree import FAILURES, Pair, Places
 from lineproof.audit.slip_whole import edits_of_copy, edits_of_result
+from lineproof.errors import UserError
 
 FARTHER = 0.25
 """By so much (natural logarithm) a slip is less likely for each line it lies further up."""
@@ -22,6 +23,8 @@ LOOSE = 3.0
 """At first fits are sought so many widths wide; then the width of each is worked out."""
 NOT_ABOVE = frozenset(("far", "mistyped constant", "mistyped argument", "place", "decimal"))
 """Large families that are not tried in lines above the claimed one: they fit anything."""
+Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
+"""What :func:`find_slips` is: graph, line, values used, claim, claimed ids; gives the slips."""
 MOST_KEPT = 400
 """Edits of so many lines are kept while one table of claims is searched."""
 
@@ -38,10 +41,31 @@ def find_slips(
     ``used`` gives for every value of the graph what follows from the values that the claim itself
     uses, in internal units; a value not in it is taken as recorded. The slip is sought in the
     claimed line and in the lines between it and the ``claimed`` ones above. An empty tuple says
-    that no single slip known here fits. For many claims of one table, :class:`SlipFinder` is
+    that no single slip known here fits. For many claims of one table, :func:`searching` is
     quicker.
     """
-    return SlipFinder(graph, used).slips(entry_id, claim, claimed)
+    return SlipSearch(graph, used).slips(entry_id, claim, claimed)
+
+
+def searching() -> Find:
+    """Return a :func:`find_slips` that keeps what it has worked out while graph and values stay.
+
+    The mapping ``used`` must not be changed between two calls.
+    """
+    kept: list[SlipSearch] = []
+
+    def find(
+        graph: Graph,
+        entry_id: str,
+        used: Mapping[str, Interval],
+        claim: Claim,
+        claimed: Container[str] = (),
+    ) -> tuple[Slip, ...]:
+        if not kept or kept[0].graph is not graph or kept[0].used is not used:
+            kept[:] = [SlipSearch(graph, used)]
+        return kept[0].slips(entry_id, claim, claimed)
+
+    return find
 
 
 def none_fits(graph: Graph, entry_id: str) -> str:
@@ -77,7 +101,7 @@ class Target:
 
 
 @dataclass(frozen=True)
-class SlipFinder:
+class SlipSearch:
     """Finds the slips behind the claims of one table, made with the values ``used``.
 
     Lines worked out for one claim are kept for the next.
@@ -99,11 +123,11 @@ class SlipFinder:
 
     def slips(self, entry_id: str, claim: Claim, claimed: Container[str] = ()) -> tuple[Slip, ...]:
         """Return the single slips that reproduce a claim, as :func:`find_slips` does."""
-        line = self._line(entry_id)
+        line = _claimed_line(self._scope, self._pairs, entry_id)
         if line is None:
             return ()
-        value, half = line.places.values[0], line.places.halves[0]
-        target = Target(claim, half / abs(value) if value else 0.0, self._pairs[entry_id][1])
+        value, half = line.pair(0)
+        target = Target(claim, half / abs(value) if value else 0.0, half)
         fits = list(_fits(_own(line, claim), target, None, 1.0, ""))
         reach = reach_of(self._scope, entry_id, claimed)
         for above, distance in (*reach.lines.items(), *reach.leaves.items()):
@@ -131,13 +155,47 @@ class SlipFinder:
         return self._above[entry_id]
 
 
-def _line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
+def _claimed_line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
+    """Return a claimed line at the value that follows for it, whatever is claimed."""
     node = scope.graph[entry_id]
+    own = pairs.copied()
+    try:
+        if node.tree is not None:
+            places = _places(scope, pairs, node)
+            own[entry_id] = places.values[0], places.halves[0]
+        elif node.is_computed:
+            own[entry_id] = _found(node, pairs)
+        else:
+            own[entry_id] = scope.graph.stored[entry_id], 0.0
+    except (*FAILURES, UserError):
+        return None
+    return _line(scope, own, entry_id)
+
+
+def _found(node: Node, pairs: Pairs) -> Pair:
+    """Return a found value and half its width, from one run more for each uncertain argument."""
+    named = {name: pairs[target] for name, target in node.args.items()}
+    middle = {name: value for name, (value, _) in named.items()}
+    value = node.compute(middle)
+    moved = [
+        abs(node.compute(middle | {name: at + half}) - value)
+        for name, (at, half) in named.items()
+        if half
+    ]
+    return value, sum(moved)
+
+
+def _places(scope: Scope, pairs: Pairs, node: Node) -> Places:
     named = {name: pairs[target] for name, target in node.args.items() if target in scope.units}
     if node.tree is None:
-        named = {node.symbol: pairs[entry_id]}
+        named = {node.symbol: pairs[node.id]}
+    return Places(scope.places(node), named)
+
+
+def _line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
+    node = scope.graph[entry_id]
     try:
-        return Line(scope, node, Places(scope.places(node), named), pairs)
+        return Line(scope, node, _places(scope, pairs, node), pairs)
     except FAILURES:
         return None
 
