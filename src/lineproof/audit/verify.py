@@ -1,4 +1,4 @@
-"""Verifying a printed package: is what is printed what the record inside it gives?"""
+"""Verifying a printed package: whether it prints what the record inside it gives."""
 
 from __future__ import annotations
 

@@ -11,6 +11,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
 from html.parser import HTMLParser
 
+from lineproof.audit.review_read import read_review
 from lineproof.audit.verify_data import Alteration, Outcome, Outside, Proof, Verification, Where
 from lineproof.audit.verify_record import (
     NOT_PRINTED,
@@ -20,7 +21,6 @@ from lineproof.audit.verify_record import (
     not_printed,
     printed_again,
 )
-from lineproof.audit.review_read import read_review
 from lineproof.errors import UserError
 from lineproof.package import build_package, records_in_html, to_html
 from lineproof.package.reviewed import REVIEW_MIME
@@ -171,7 +171,7 @@ def _drawn(tag: str, named: dict[str, str]) -> str:
     kept = sorted(
         (name, value.rpartition("#")[2] if name in _ADDRESSES and "#" in value else value)
         for name, value in shown.items()
-        if value and name not in _UNSEEN or name == "hidden"
+        if (value and name not in _UNSEEN) or name == "hidden"
     )
     return f"{tag} {kept}"
 

@@ -83,7 +83,6 @@ class _File:
 
     def __init__(self, content: bytes) -> None:
         import pypdf  # noqa: PLC0415 - only reading a PDF needs it
-        import pypdf.errors  # noqa: PLC0415 - as above
 
         self.content = content
         if not is_pdf(content):
@@ -92,17 +91,21 @@ class _File:
             raise UserError("this PDF is damaged, its end is missing; give the whole file")
         try:
             self.reader = pypdf.PdfReader(io.BytesIO(content))
-            if self.reader.is_encrypted:
-                raise UserError("this PDF is encrypted; give it without a password")
-            self.pages: list[Any] = list(self.reader.pages)
-            self.attached = {
-                name: parts for name, parts in self.reader.attachments.items() if parts
-            }
-        except UserError:
-            raise
+            locked = self.reader.is_encrypted
+            self.pages: list[Any] = [] if locked else list(self.reader.pages)
+            self.attached: dict[str, list[bytes]] = (
+                {} if locked else {name: list(parts) for name, parts in self._attachments()}
+            )
         except Exception as error:  # noqa: BLE001 - damage makes it fail in any of its layers
             reason = f"{type(error).__name__}: {error}"[:80]
             raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
+        if locked:
+            raise UserError("this PDF is encrypted; give it without a password")
+
+    def _attachments(self) -> Iterator[tuple[str, list[bytes]]]:
+        for name, parts in self.reader.attachments.items():
+            if parts:
+                yield str(name), parts if isinstance(parts, list) else [parts]
 
     def records(self) -> list[Record]:
         """Return the records attached, in order; raises :class:`UserError`."""
@@ -131,7 +134,8 @@ class _File:
             told.append(f"{ends - 1} later change(s) appended to the file as issued")
         told += [f"signed by others: {signer}; the signature itself is not checked here"
                  for signer in self._signers()]  # fmt: skip
-        producer = str((self.reader.metadata or {}).get("/Producer", ""))
+        metadata: Any = self.reader.metadata
+        producer = str(metadata.get("/Producer", "")) if metadata else ""
         if producer:
             told.append(f"saved again by {producer[:60]}")
         return told

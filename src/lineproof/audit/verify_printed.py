@@ -12,6 +12,7 @@ from collections import Counter, defaultdict
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, field
 from itertools import pairwise
+from unicodedata import normalize
 
 from lineproof.audit.verify_align import Gap, gaps
 from lineproof.audit.verify_data import Alteration, Outside, Where
@@ -23,6 +24,8 @@ _ROW = 3.0
 _ASCENT, _WITHIN = 0.75, 2.0
 _CHAINED = 300
 """Marks between two differences that may belong to one row broken by the end of a page."""
+_LARGEST_OF_ROWS = 10.3
+_FORMULA = re.compile("[\U0001d400-\U0001d7ff]")
 _LABEL = re.compile(r"\d+\.\d+\Z")
 _TOTAL = re.compile(r"Page \d+ of (\d+)\Z")
 
@@ -78,9 +81,6 @@ class _Lines:
             made.append(now)
         self.left = left
         return made
-
-
-_LARGEST_OF_ROWS = 10.3
 
 
 @dataclass
@@ -172,7 +172,8 @@ class _Pages:
     def heights(self) -> Iterator[Alteration]:
         """Give what stands at another height than the record prints it, or within a figure."""
         for first, start, count in self.runs:
-            pairs = zip(self.ours[first : first + count], self.theirs[start : start + count])
+            ours, theirs = self.ours[first : first + count], self.theirs[start : start + count]
+            pairs = zip(ours, theirs, strict=True)
             for place, (pair, following) in enumerate(pairwise(pairs), first):
                 if _moved(pair, following) or _figure_moved(*following):
                     gap = Gap(place + 1, place + 2, start + place + 1 - first, 0)
@@ -329,7 +330,14 @@ def _figure_moved(ours: Mark, theirs: Mark) -> bool:
 
 
 def _text(marks: Iterable[Mark]) -> str:
-    return "".join(mark.text for mark in marks)
+    """Return what marks say, a space where a new line begins; letters of formulas as letters."""
+    said = []
+    last: Mark | None = None
+    for mark in marks:
+        below = last is not None and (mark.page != last.page or last.y - mark.y > _ROW)
+        said.append(f" {mark.text}" if below else mark.text)
+        last = mark
+    return _FORMULA.sub(lambda found: normalize("NFKC", found[0]), "".join(said))
 
 
 def _quoted(mark: Mark) -> str:

@@ -1,4 +1,4 @@
-"""``lineproof verify``: is what a package prints what the record inside it gives?"""
+"""``lineproof verify``: whether a package prints what the record inside it gives."""
 
 from __future__ import annotations
 

@@ -61,7 +61,10 @@ CAUTIONS = (
 
 @dataclass(frozen=True, slots=True)
 class Package:
-    """A whole package: the project's facts once, then one or many calcs."""
+    """A whole package: the project's facts once, then one or many calcs.
+
+    ``kind`` says on the cover what it is, ``chapter`` what its lines are called.
+    """
 
     title: str
     facts: ProjectFacts
@@ -70,6 +73,8 @@ class Package:
     missing_glyphs: bool
     cautions: tuple[str, ...] = CAUTIONS
     reviews: tuple[PrintedReview, ...] = ()
+    kind: str = "Structural calculation package"
+    chapter: str = "Working"
 
     @property
     def failures(self) -> tuple[Failure, ...]:
