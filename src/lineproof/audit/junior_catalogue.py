@@ -101,10 +101,10 @@ def compared(
     known = catalogue_of(symbol)
     if not known or sum(1 for _ in islice(walk(tree), _LARGEST + 1)) > _LARGEST:
         return Compared(Said.UNLIKE)
-    for formula in known:
-        met = _agreement(tree, formula, units or {}, scales=scales)
-        if met is not None:
-            return met
+    met = [_agreement(tree, formula, units or {}, scales=scales) for formula in known]
+    agreed = [one for one in met if one is not None]
+    if agreed:
+        return min(agreed, key=lambda one: one.said is not Said.AGREES)
     if scales:
         tree = _without_conversions(tree, known)
     pairs = sorted(

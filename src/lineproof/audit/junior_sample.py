@@ -131,6 +131,9 @@ def constant_ratio(first: Values, second: Values) -> float | None:
     >>> constant_ratio(np.arange(1.0, 25.0) * 3, np.arange(1.0, 25.0))
     3.0
     """
+    held = np.isfinite(first) & np.isfinite(second)
+    if np.count_nonzero(held) >= ENOUGH and np.array_equal(first[held], second[held]):
+        return 1.0  # also where both are zero, so that there is no ratio
     found = ratios(first, second)
     if len(found) < ENOUGH or not np.any(found):
         return None
