@@ -13,15 +13,17 @@ from dataclasses import dataclass, replace
 from itertools import product
 from random import Random
 
-from tests.audit.planting_rows import WORDS
-from tests.audit.planting_slips import Planted, Values, all_slips, three_digits
-
 from lineproof.audit.data import Claim, Interval, Judged, read_from
 from lineproof.audit.graph import Graph, Node
 from lineproof.quantity.units import internal_factor
 
+from .planting_rows import WORDS
+from .planting_slips import Planted, Values, all_slips, three_digits
+
 MOST_CORNERS = 12
 """Arguments of which every end is tried against every end of the others."""
+PEN_EVERY = 5
+"""Slips of the pen, each on a sheet of its own, are planted in every fifth beam."""
 
 
 def junior_sheet(graph: Graph, planted: Sequence[Planted]) -> tuple[Values, list[str]]:
@@ -81,10 +83,31 @@ def reach(node: Node, claims: Mapping[str, Claim]) -> Interval:
     return Interval(min(found), max(found))
 
 
-def is_beyond(graph: Graph, slip: Planted, claims: Mapping[str, Claim]) -> bool:
-    """Tell whether the claim of a slip's line cannot follow from the claims it rests on."""
-    node = graph[slip.id]
-    return not reach(node, claims).meets(claims[slip.id].stands_for)
+def is_beyond(
+    graph: Graph, slip: Planted, claims: Mapping[str, Claim], values: Mapping[str, float]
+) -> bool:
+    """Tell whether a slip moves its line beyond rounding.
+
+    The claim cannot follow from the claims it rests on. Among many slips on a sheet, one does not
+    count there whose line by chance comes back to its right value, nor one in a part where others
+    turned a decision, so that other formulas apply.
+    """
+    node, written = graph[slip.id], claims[slip.id].stands_for
+    if reach(node, claims).meets(written):
+        return False
+    right = claims_of(graph, graph.stored, [node.id, *node.args.values()])
+    by_chance = reach(node, right).meets(written) and not slip.inputs
+    return not by_chance and not _turned(graph, node.part, values)
+
+
+def _turned(graph: Graph, part: str, values: Mapping[str, float]) -> bool:
+    decisions = [n for n in graph if n.part == part and n.kind == "decision"]
+    return any(n.compared(graph.named(n, values)).holds != n.entry["holds"] for n in decisions)
+
+
+def written(values: Mapping[str, float], planted: Sequence[Planted]) -> Values:
+    """Return the values as they were written, slips of the pen with them."""
+    return dict(values) | {s.id: s.written(values[s.id]) for s in planted if s.written}
 
 
 @dataclass(frozen=True)
@@ -97,7 +120,7 @@ class Sheet:
 
     def claims(self, ids: Sequence[str] | None = None) -> dict[str, Claim]:
         """Return what he wrote down, of every line or of those asked for."""
-        return claims_of(self.graph, self.values, ids)
+        return claims_of(self.graph, written(self.values, self.planted), ids)
 
     @property
     def touched(self) -> set[str]:
@@ -115,23 +138,23 @@ def sheet_with(graph: Graph, wanted: Sequence[Planted]) -> Sheet:
         above = set(graph.above([failed[0]])) | {failed[0]}
         guilty = [s for s in kept if s.id in above or {n for n, _ in s.inputs} & above]
         kept.remove(max(guilty, key=lambda s: _change(graph, s, values)))
-    claims = claims_of(graph, values)
-    told = tuple(replace(s, beyond=is_beyond(graph, s, claims)) for s in kept)
+    claims = claims_of(graph, written(values, kept))
+    told = tuple(replace(s, beyond=is_beyond(graph, s, claims, values)) for s in kept)
     return Sheet(graph, values, told)
 
 
 def sheets(graph: Graph, number: int) -> Iterator[Sheet]:
     """Give sheets until every slip chosen for a beam was planted where it moves its line.
 
-    Many slips on one sheet are still each judged by what stands above them. A slip that others
-    drown, or that leaves a line below without a number, comes on a sheet of its own.
+    Many slips on one sheet are still each judged by what stands above them. A slip of the pen, one
+    that others drown, or that leaves a line below without a number, comes on a sheet of its own.
     """
     wanted = chosen(graph, number)
-    first = sheet_with(graph, wanted)
+    first = sheet_with(graph, [slip for slip in wanted if slip.written is None])
     yield first
     done = {slip.id for slip in first.planted if slip.beyond}
     for slip in wanted:
-        if slip.id not in done:
+        if slip.id not in done and (slip.written is None or number % PEN_EVERY == 0):
             yield sheet_with(graph, [slip])
 
 
@@ -170,17 +193,20 @@ def _shuffled(slips: Sequence[Planted], draw: Random) -> list[Planted]:
 
 
 def _moves(graph: Graph, slip: Planted, claims: Mapping[str, Claim]) -> bool:
-    """Tell whether a slip alone moves its line beyond rounding, by less than a million times."""
+    """Tell whether a slip alone moves its line beyond rounding, not a million times, not to 0."""
     values = dict(graph.stored) | dict(slip.inputs)
     try:
-        wrong = slip.work(values)
+        wrong = slip.work(dict(values))
     except (ArithmeticError, ValueError):
         return False
-    if not math.isfinite(wrong) or abs(wrong) > 1e6 * abs(graph.stored[slip.id]):
+    right = abs(graph.stored[slip.id])
+    if not math.isfinite(wrong) or not 1e-6 * right < abs(wrong) < 1e6 * right:
         return False
+    values[slip.id] = wrong
+    wrong = slip.written(wrong) if slip.written else wrong
     new = {i: claim(graph[i], value) for i, value in slip.inputs}
     new[slip.id] = claim(graph[slip.id], wrong)
-    return is_beyond(graph, slip, dict(claims) | new)
+    return is_beyond(graph, slip, dict(claims) | new, values)
 
 
 # What was said of it ------------------------------------------------------------------------------

@@ -15,7 +15,7 @@ from lineproof.errors import UserError
 
 PAIRS = ("NBC 2015 + A23.3-14", "NBC 2020 + A23.3:19")
 SHAPES = ("T", "L", "rectangular")
-SINGLE, ONE_SPAN, TWO_SPANS, THREE_SPANS = 210, 54, 24, 12
+SINGLE, ONE_SPAN, TWO_SPANS, THREE_SPANS = 225, 50, 18, 7
 """How many beams there are: single floor beams (flexure), and whole beams of 1 to 3 spans."""
 BEAMS = SINGLE + ONE_SPAN + TWO_SPANS + THREE_SPANS
 _SPANS = (0,) * SINGLE + (1,) * ONE_SPAN + (2,) * TWO_SPANS + (3,) * THREE_SPANS
@@ -91,14 +91,14 @@ def _whole(draw: Random, spans: int) -> Graph:
 @cache
 def beam(number: int) -> Graph:
     """Return one of the random beams, 0 to ``BEAMS - 1``; a refused draw is drawn again."""
-    spans = _SPANS[number]
+    spans, said = _SPANS[number], ""
     for attempt in range(_TRIES):
         draw = Random(1000 * number + attempt)  # noqa: S311 - the same beams every time
         try:
             return _whole(draw, spans) if spans else _single(draw)
-        except UserError:
-            continue
-    msg = f"no beam in {_TRIES} draws for number {number}"
+        except UserError as error:
+            said = str(error)
+    msg = f"no beam in {_TRIES} draws for number {number}: {said}"
     raise AssertionError(msg)
 
 

@@ -31,9 +31,12 @@ EDITION = "another edition's constant"
 STANDARD = "another standard's constant"
 DIGIT = "digits of the result"
 DIGIT_IN = "digits of an argument"
+UNIT_WRITTEN = "unit of the written value only"
+DIGIT_WRITTEN = "digits of the written value only"
 KINDS = (
     LEFT_OUT, TWICE, SYMBOL, DIAMETER, COUNT, LEG, A_T, ROOT, SIGN, UNIT, DEGREES, SERVICE,
     TRIBUTARY, CLEAR, SIMPLE, FACE, SIDE, ZONE, BAR_ROW, EDITION, STANDARD, DIGIT, DIGIT_IN,
+    UNIT_WRITTEN, DIGIT_WRITTEN,
 )  # fmt: skip
 
 WORDS = {
@@ -60,6 +63,8 @@ WORDS = {
     STANDARD: "standard|ACI|constant|edition",
     DIGIT: "digit|transposed|mistyped|typed",
     DIGIT_IN: "digit|transposed|mistyped|typed",
+    UNIT_WRITTEN: "unit|kN|mm|10\\^|1000|thousand",
+    DIGIT_WRITTEN: "digit|transposed|mistyped|typed",
 }
 """By kind the words of which one at least must stand in the sentence or in its kind."""
 

@@ -4,18 +4,18 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Iterator, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from decimal import Decimal
-from functools import cache
+from functools import cache, lru_cache
 from itertools import pairwise
 from random import Random
-
-from tests.audit import planting_rows as rows
-from tests.audit.planting_rows import ROWS
 
 from lineproof.audit.graph import Graph, Node, evaluated
 from lineproof.formula import Tree, names_of, parse_expression
 from lineproof.quantity.units import internal_factor
+
+from . import planting_rows as rows
+from .planting_rows import ROWS
 
 Values = dict[str, float]
 RADIAN = "57.29577951308"
@@ -30,7 +30,8 @@ class Planted:
     """A slip at a line: its kind, the value that was worked, and what a sentence must name.
 
     ``work`` gives the wrong value from the values on the sheet; ``inputs`` are givens that were
-    written otherwise with it; ``beyond`` tells whether it moves the line beyond rounding.
+    written otherwise with it; ``written`` is a slip of the pen: the value was worked and used
+    rightly. ``beyond`` tells whether the slip moves the line beyond rounding.
     """
 
     kind: str
@@ -40,6 +41,7 @@ class Planted:
     says: tuple[str, ...]
     inputs: tuple[tuple[str, float], ...] = ()
     beyond: bool = True
+    written: Callable[[float], float] | None = None
 
 
 @cache
@@ -99,10 +101,17 @@ def worked_by(graph: Graph, node: Node, text: str) -> Callable[[Values], float] 
 Making = Iterator[Planted]
 
 
+PLACES = {
+    rows.SIMPLE: ("sag", "deflection"),
+    rows.FACE: ("hog", "shear"),
+}
+"""Parts in which a kind of slip makes sense; any part for the others."""
+
+
 def from_rows(graph: Graph, node: Node) -> Making:
     """Give the slips of the table that fit a line."""
     for row in ROWS:
-        if row.right == right_side(node):
+        if row.right == right_side(node) and node.part.startswith(PLACES.get(row.kind, ("",))):
             work = worked_by(graph, node, row.wrong)
             if work is not None:
                 yield Planted(row.kind, node.id, row.wrong, work, row.says)
@@ -164,6 +173,15 @@ def _same(value: float) -> Callable[[Values], float]:
     return lambda _: value
 
 
+@lru_cache(maxsize=2)
+def on_sheet(graph: Graph) -> tuple[dict[str, int], dict[str, list[str]]]:
+    """Return the places of the lines on a sheet, and the lines by their symbol."""
+    named: dict[str, list[str]] = {}
+    for node in graph:
+        named.setdefault(node.symbol, []).append(node.id)
+    return {i: place for place, i in enumerate(graph.nodes)}, named
+
+
 def from_neighbours(graph: Graph, node: Node) -> Making:
     """Give slips between places: another zone's value in the line, the other face's result."""
     kind = node.part.partition("-")[0]
@@ -181,12 +199,11 @@ def from_neighbours(graph: Graph, node: Node) -> Making:
 
 def _from_zone(graph: Graph, node: Node, name: str, kind: str) -> Making:
     target = graph[node.args[name]]
-    order = list(graph.nodes)
-    before = order[: order.index(node.id)]
-    for other in before:
+    places, named = on_sheet(graph)
+    for other in named[target.symbol]:
         there = graph[other]
         if (
-            there.symbol == target.symbol and there.part.startswith(kind)
+            places[other] < places[node.id] and there.part.startswith(kind)
             and there.part.count("-") == target.part.count("-") and there.part != target.part
             and abs(there.stored - target.stored) > 1e-6 * abs(target.stored)
         ):  # fmt: skip
@@ -202,30 +219,38 @@ def _with(node: Node, swapped: Mapping[str, str]) -> Callable[[Values], float]:
 
 def from_writing(graph: Graph, node: Node, draw: Random) -> Making:
     """Give slips of writing: a unit, digits of the result, digits of an argument."""
+
+    def right(values: Values) -> float:
+        return node.compute(graph.named(node, values))
+
+    def other_digits(value: float) -> float:
+        return changed_digits(value, node.unit, node.id)
+
     if node.unit in ("kN", "kN.m", "kN/m", "MPa"):
         factor = draw.choice([1000.0, 0.001])
-        says = ("~unit", "~1000", "~thousand", "~10\\^", "~kN")
-        yield Planted(rows.UNIT, node.id, f"times {factor}", _times(graph, node, factor), says)
-
-    def otherwise(values: Values) -> float:
-        return changed_digits(node.compute(graph.named(node, values)), node.unit, f"{node.id}")
-
-    yield Planted(rows.DIGIT, node.id, "digits of the result", otherwise, ("~digit", "~transposed"))
+        what, unit = f"times {factor}", ("~unit", "~1000", "~thousand", "~10\\^", "~kN")
+        yield Planted(rows.UNIT, node.id, what, lambda v: right(v) * factor, unit)
+        pen = Planted(rows.UNIT_WRITTEN, node.id, f"written {what}", right, unit)
+        yield replace(pen, written=lambda value: value * factor)
+    what, says = "digits of the result", ("~digit", "~transposed")
+    yield Planted(rows.DIGIT, node.id, what, lambda v: other_digits(right(v)), says)
+    pen = Planted(rows.DIGIT_WRITTEN, node.id, f"written, {what}", right, says)
+    yield replace(pen, written=other_digits)
     named = [n for n, t in node.args.items() if graph[t].kind in ("given", "line") and n != "x_f"]
     if named:
-        name = draw.choice(named)
-        target = graph[node.args[name]]
-
-        def misread(values: Values) -> float:
-            args = graph.named(node, values)
-            args[name] = changed_digits(args[name], target.unit, f"{node.id} {name}")
-            return node.compute(args)
-
-        yield Planted(rows.DIGIT_IN, node.id, f"digits of {name}", misread, (name, target.symbol))
+        yield _misread(graph, node, draw.choice(named))
 
 
-def _times(graph: Graph, node: Node, factor: float) -> Callable[[Values], float]:
-    return lambda values: node.compute(graph.named(node, values)) * factor
+def _misread(graph: Graph, node: Node, name: str) -> Planted:
+    target = graph[node.args[name]]
+
+    def misread(values: Values) -> float:
+        args = graph.named(node, values)
+        args[name] = changed_digits(args[name], target.unit, f"{node.id} {name}")
+        return node.compute(args)
+
+    says = (name, target.symbol)
+    return Planted(rows.DIGIT_IN, node.id, f"digits of {name}", misread, says)
 
 
 def changed_digits(value: float, unit: str, seed: str) -> float:

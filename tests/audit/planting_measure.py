@@ -1,0 +1,155 @@
+"""What the audit makes of the seeded errors, counted by kind.
+
+``python -m tests.audit.planting_measure`` from the root of the project prints the table and what
+went wrong; a number behind it takes every so many beams only.
+"""
+
+from __future__ import annotations
+
+import sys
+from collections import Counter
+from collections.abc import Iterable
+from dataclasses import dataclass, field
+
+from lineproof.audit.data import Claim, Judged, Verdict
+from lineproof.audit.graph import Graph
+from lineproof.audit.judge import judge
+from lineproof.audit.slips import find_slips
+
+from .planting import Sheet, sheets, told_at
+from .planting_beams import BEAMS, beam
+from .planting_quick import Quick, quick_tables
+from .planting_rows import KINDS
+
+FOUND = (Verdict.ORIGIN, Verdict.UNIT)
+CALM = (Verdict.AGREES, Verdict.CARRIED)
+"""What may be said of a line that was honestly worked and written."""
+FIRST = 3
+QUICK_EVERY = 3
+"""Every third beam is judged by its quick table too."""
+
+
+@dataclass
+class Tally:
+    """Counts by kind of slip: planted beyond rounding, origin found, slip told; what went wrong."""
+
+    planted: Counter[str] = field(default_factory=Counter)
+    found: Counter[str] = field(default_factory=Counter)
+    told: Counter[str] = field(default_factory=Counter)
+    claims: int = 0
+    untouched: int = 0
+    missed: list[str] = field(default_factory=list)
+    false: list[str] = field(default_factory=list)
+    untold: list[str] = field(default_factory=list)
+
+    @property
+    def share_told(self) -> float:
+        """Share of the origins found whose true slip stands among the first three."""
+        return self.told.total() / self.found.total()
+
+    def lines(self) -> Iterable[str]:
+        """Give the table of counts by kind."""
+        for kind in KINDS:
+            if self.planted[kind]:
+                yield (
+                    f"{kind:34} planted {self.planted[kind]:4}  origin {self.found[kind]:4}  "
+                    f"among the first three {self.told[kind]:4}"
+                )
+        yield (
+            f"all: planted {self.planted.total()}, origin {self.found.total()}, among the first "
+            f"three {self.told.total()} ({100 * self.share_told:.1f} %); {self.claims} claims, "
+            f"{self.untouched} of them on untouched lines, false origins {len(self.false)}"
+        )
+
+
+def measured(numbers: Iterable[int]) -> tuple[Tally, Tally]:
+    """Judge the beams of these numbers; return the counts of full and of quick tables."""
+    full, quick = Tally(), Tally()
+    for number in numbers:
+        graph = beam(number)
+        for sheet in sheets(graph, number):
+            _count_full(full, number, sheet)
+        if number % QUICK_EVERY == 0:
+            for table in quick_tables(graph, number):
+                _count_quick(quick, number, table)
+    return full, quick
+
+
+def _judged(graph: Graph, claims: Iterable[Claim]) -> dict[str, Judged]:
+    return {found.id: found for found in judge(graph, list(claims), find_slips)}
+
+
+def _count_full(tally: Tally, number: int, sheet: Sheet) -> None:
+    claims = sheet.claims()
+    said = _judged(sheet.graph, claims.values())
+    for slip in sheet.planted:
+        if not slip.beyond:
+            continue
+        tally.planted[slip.kind] += 1
+        what = f"beam {number}, {slip.kind}: {slip.id} worked as {slip.what}: "
+        judged = said[slip.id]
+        if judged.verdict not in FOUND:
+            tally.missed.append(f"{what}{judged.verdict}, {judged.note}")
+            continue
+        tally.found[slip.kind] += 1
+        tally.missed.extend(
+            f"{what}{given} {said[given].verdict}"
+            for given, _ in slip.inputs
+            if said[given].verdict is not Verdict.INPUT
+        )
+        _count_told(tally, slip.kind, told_at(slip, judged), what, judged)
+    untouched = set(claims) - sheet.touched
+    tally.claims += len(claims)
+    tally.untouched += len(untouched)
+    tally.false.extend(
+        f"beam {number}: {i} {said[i].verdict}, {said[i].note}"
+        for i in claims
+        if i in untouched and said[i].verdict not in CALM
+    )
+
+
+def _count_told(tally: Tally, kind: str, place: int | None, what: str, judged: Judged) -> None:
+    if place is not None and place <= FIRST:
+        tally.told[kind] += 1
+    else:
+        said = "; ".join(f"{slip.kind}: {slip.sentence}" for slip in judged.slips[:FIRST])
+        typed = judged.claim.typed if judged.claim else ""
+        tally.untold.append(f"{what}claimed {typed} for {judged.follows}; said: {said}")
+
+
+def _count_quick(tally: Tally, number: int, table: Quick) -> None:
+    slip, claims = table.slip, table.claims
+    said = _judged(beam(number), claims.values())
+    tally.claims += len(claims)
+    what = f"beam {number}, quick, {slip.kind}: {slip.id} worked as {slip.what}: "
+    if table.shows_at:
+        tally.planted[slip.kind] += 1
+        origins = [said[i] for i in table.shows_at if said[i].verdict in FOUND]
+        if not origins or any(said[i].verdict is Verdict.AGREES for i in table.shows_at):
+            tally.missed.append(f"{what}{[(i, str(said[i].verdict)) for i in table.shows_at]}")
+        if origins:
+            tally.found[slip.kind] += 1
+            places = [told_at(slip, judged) or sys.maxsize for judged in origins]
+            _count_told(tally, slip.kind, min(places), what, origins[0])
+    for i in claims:
+        calm = (Verdict.AGREES,) if i not in table.below else CALM
+        if i not in table.below or i in table.later:
+            tally.untouched += 1
+            if said[i].verdict not in calm and i not in dict(slip.inputs):
+                tally.false.append(f"{what}{i} {said[i].verdict}, {said[i].note}")
+
+
+def report(full: Tally, quick: Tally, *, faults: bool = False) -> str:
+    """Return the counts as text, with what went wrong if asked for."""
+    lines = []
+    for name, tally in (("full tables", full), ("quick tables", quick)):
+        lines += ["", name, *tally.lines()]
+        if faults:
+            for word in ("missed", "false", "untold"):
+                lines += [f"{word}: {line}" for line in getattr(tally, word)]
+    return "\n".join(lines) + "\n"
+
+
+if __name__ == "__main__":
+    STEP = int(sys.argv[1]) if len(sys.argv) > 1 else 1
+    sys.stdout.write(report(*measured(range(0, BEAMS, STEP)), faults=True))
