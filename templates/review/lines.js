@@ -65,10 +65,14 @@ function placeLines(calcs) {
 }
 
 function targetOf(link) {
+  return link ? decoded(link.getAttribute("href").slice(1)) : "";
+}
+
+function decoded(text) {
   try {
-    return link ? decodeURIComponent(link.getAttribute("href").slice(1)) : "";
+    return decodeURIComponent(text);
   } catch {
-    return "";
+    return text;
   }
 }
 

@@ -16,7 +16,11 @@ class Desk {
     opener.addEventListener("click", () => this.open());
     root.addEventListener("click", (event) => this.clicked(event.target.closest("button")));
     document.addEventListener("keydown", (event) => this.key(event));
-    addEventListener("hashchange", () => this.hash());
+    addEventListener("hashchange", () => this.follow(location.hash));
+    document.addEventListener("click", (event) => {
+      const link = event.target.closest("a[href^='#']");
+      if (link) setTimeout(() => this.follow(link.getAttribute("href"))); // after the page has moved
+    });
     for (const name of ["name", "initials"]) {
       part.get(name).addEventListener("change", () => this.signIn());
     }
@@ -93,10 +97,10 @@ class Desk {
     this.step(1, (line) => isShown("unmarked", line, line.calc.states.get(line.id), false));
   }
 
-  hash() {
-    if (!this.panel.isOpen) return;
-    const line = this.work.byPlace.get(targetOf({ getAttribute: () => location.hash }));
-    if (line?.element) this.jump(line, { focus: false });
+  // A link of the page takes the line in hand along.
+  follow(href) {
+    const line = this.work.byPlace.get(decoded(href.slice(1)));
+    if (this.panel.isOpen && line?.element) this.jump(line, { focus: false });
   }
 
   // A line asked for by name is shown, whatever the filter hides.
@@ -166,7 +170,10 @@ class Desk {
   prefill() {
     const { line } = this.work;
     const field = this.panel.part.get("lines");
-    if (this.panel.part.get("raise").open && line) field.value = line.label || line.id;
+    if (!this.panel.part.get("raise").open || !line) return;
+    if (field.value && field.value !== this.filled) return; // what somebody typed stays
+    this.filled = line.label || line.id;
+    field.value = this.filled;
   }
 
   raise() {
@@ -189,6 +196,7 @@ class Desk {
     }
     const number = this.work.raise(part.get("severity").value, text, [...new Set(ids)]);
     part.get("finding").value = "";
+    part.get("lines").value = "";
     part.get("raise").open = false;
     this.refresh();
     this.panel.say(`Finding ${number} is written down.`);
@@ -214,7 +222,7 @@ class Desk {
     const { work } = this;
     const { calc } = work;
     const text = toText(work.review());
-    const page = targetOf({ getAttribute: () => ` ${location.pathname.split("/").pop()}` });
+    const page = decoded(location.pathname.split("/").pop());
     const stem = work.calcs.length === 1 && /\.html?$/i.test(page) ? page.replace(/\.html?$/i, "") : calc.id;
     const link = made("a", "", { download: `${stem.replace(/[^\p{L}\p{N}._ -]/gu, "-")}.review.json` });
     link.href = URL.createObjectURL(new Blob([text], { type: "application/json" }));
@@ -307,7 +315,10 @@ class Desk {
       this.panel.say("Choose a line first.");
       return;
     }
-    if (field === "finding") this.panel.part.get("raise").open = true;
+    if (field === "finding") {
+      this.panel.part.get("raise").open = true;
+      this.prefill();
+    }
     this.panel.part.get(field).focus();
   }
 
