@@ -29,7 +29,10 @@ def audit() -> Audit:
     record = beam()
     graph = Graph(record)
     claims = [typed(graph, "beam/A_s", "1200"), typed(graph, "strength/M_r", "220")]
-    effect = Effect("strength/strength", 0.818, 0.871, True, True, "moment, from 0.82 to 0.87")
+    effect = Effect(
+        check="strength/strength", claimed=0.818, right=0.871, holds_as_claimed=True, holds=True,
+        sentence="moment, from 0.82 to 0.87",
+    )  # fmt: skip
     findings = (
         Finding("claims", Severity.MAJOR, "M_r does not follow", ("strength/M_r",), "10.1",
                 "Work it again.", (effect,)),
@@ -59,7 +62,7 @@ def test_findings_are_numbered_the_gravest_first_with_line_clause_and_effect(aud
     label = beam().entries["strength/M_r"]["label"]
     major = found["findings-major"]
     assert f"Finding 2, line {label}" in major
-    assert "Clause 10.1. Work it again." in major
+    assert any(text.startswith("Clause 10.1. Work it again.") for text in major)
     assert major[-4:] == ["Span 1: strength", "0.82", "0.87", "still holds"]
 
 
@@ -76,7 +79,8 @@ def test_judged_lines_show_claim_what_follows_what_is_right_and_verdict(audit: A
     assert rows[1][2] == "220 kN·m"
     assert rows[1][4] == "206.6 kN·m"
     low, high = rows[1][3].removesuffix(" kN·m").split(" to ")
-    assert 205.7 < float(low) < 206.0 < 207.2 < float(high) < 207.5
+    assert 205.7 < float(low) < 206.0
+    assert 207.2 < float(high) < 207.5
 
 
 def test_every_line_that_was_not_claimed_is_named(audit: Audit) -> None:

@@ -213,7 +213,7 @@ class _Report:
         """Name the slips that give a claimed value beside the one that the advice names."""
         slips = self.slips.get(finding.ids[0], ()) if finding.ids else ()
         others = [
-            s.sentence
+            s.sentence.rstrip(".")
             for s in slips[:MOST_SLIPS]
             if s.sentence.lower() not in finding.advice.lower()
         ]
