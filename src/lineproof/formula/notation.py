@@ -6,6 +6,7 @@ import keyword
 import re
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
+from functools import lru_cache
 
 from lineproof.errors import UserError
 
@@ -16,6 +17,8 @@ GREEK = {
     "psi": "ψ", "omega": "ω", "Gamma": "Γ", "Delta": "Δ", "Theta": "Θ", "Sigma": "Σ",
     "Phi": "Φ", "Psi": "Ψ", "Omega": "Ω",
 }  # fmt: skip
+MOST_KEPT = 8192
+"""Ids that are kept as checked: a symbol stands in many lines."""
 _ID = re.compile(r"[A-Za-z][A-Za-z0-9_]{0,39}\Z")
 
 
@@ -35,6 +38,7 @@ class Symbol:
     unit: str = ""
 
 
+@lru_cache(maxsize=MOST_KEPT)
 def check_id(symbol_id: str) -> str:
     """Return ``symbol_id`` if it can name a symbol, else raise :class:`UserError`."""
     if not _ID.match(symbol_id) or keyword.iskeyword(symbol_id):

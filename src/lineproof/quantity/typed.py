@@ -6,6 +6,7 @@ import math
 import re
 from dataclasses import dataclass
 from decimal import Decimal
+from functools import lru_cache
 from typing import Protocol, runtime_checkable
 
 from lineproof.errors import UserError
@@ -21,6 +22,8 @@ from lineproof.quantity.units import (
 _NUMBER = r"[+-]?(?:[0-9]{1,20}(?:\.[0-9]{0,20})?|\.[0-9]{1,20})(?:[eE][+-]?[0-9]{1,2})?"
 _TYPED = re.compile(rf"({_NUMBER})(?![0-9.])(.*)\Z", re.DOTALL)
 _LONGEST_ECHO = 60
+_MOST_KEPT = 4096
+"""Texts that are kept as read: a record is read from the same ones again and again."""
 _PINT_NAMES = {"in_l": "inch", "h_t": "hour", "min_t": "minute", "d_t": "day"}
 
 
@@ -80,6 +83,15 @@ def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
     Traceback (most recent call last):
     lineproof.errors.UserError: f_c: '32' has no unit; write '32 MPa'
     """
+    return _read_text(name, given, unit) if given.__class__ is str else _read(name, given, unit)
+
+
+@lru_cache(maxsize=_MOST_KEPT)
+def _read_text(name: str, given: str, unit: str) -> Typed:
+    return _read(name, given, unit)
+
+
+def _read(name: str, given: QuantityInput, unit: str) -> Typed:
     wanted = unit_named(unit)
     if isinstance(given, bool) or given is None:
         raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")

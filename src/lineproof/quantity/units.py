@@ -223,3 +223,9 @@ def system_unit(unit: str, system: str) -> str:
     kind = UNITS[unit].kind
     internal = UNITS[unit].internal
     return METRE_SYSTEM.get(kind, internal) if system == "kN-m" else internal
+
+
+@cache
+def system_factor(unit: str, system: str) -> float:
+    """Return the float that turns a number in :func:`system_unit` into the internal unit."""
+    return internal_factor(system_unit(unit, system))

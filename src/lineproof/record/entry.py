@@ -27,7 +27,7 @@ def rested_on(arguments: Iterable[tuple[str, str]]) -> list[str]:
 
     Sorted, since a record that was saved by Jupyter comes back with its keys sorted.
     """
-    return sorted(f"{name}={digest}" for name, digest in arguments)
+    return sorted([f"{name}={digest}" for name, digest in arguments])
 
 
 class Part:

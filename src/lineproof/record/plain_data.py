@@ -6,6 +6,7 @@ import json
 import math
 import re
 from collections.abc import Iterable, Mapping
+from operator import itemgetter
 from typing import Any
 
 from lineproof.errors import UserError
@@ -27,35 +28,44 @@ def check_plain(data: object) -> None:
 
 
 def _all_plain(data: object) -> bool:
-    """Tell whether all is plain, all texts and numbers at once; :func:`_check` tells what is not.
+    """Tell whether all is plain, by the shortest way; :func:`_check` tells what is not.
 
-    A record holds some hundred thousand of them: a call for each would take half of the reading.
+    A record holds some hundred thousand values: a call for each would take half of the reading.
     """
-    texts: list[str] = []
-    numbers: list[float] = []
-    waiting: list[tuple[object, int]] = [([data], -1)]
-    while waiting:
-        holder, depth = waiting.pop()
-        if depth > DEEPEST:
-            return False
-        if holder.__class__ is dict:
-            texts.extend(holder)
-            holder = holder.values()
-        for item in holder:  # type: ignore[attr-defined]
-            kind = item.__class__
-            if kind is str:
-                texts.append(item)
-            elif kind is dict or kind is list:
-                waiting.append((item, depth + 1))
-            elif kind is float:
-                numbers.append(item)
-            elif not _is_plain(item):
-                return False
+    foreign: list[str] = []
+    waiting: list[Any] = [[data]]
+    depths = [-1]
     try:
-        "".join(texts).encode()
+        while waiting:
+            items, depth = waiting.pop(), depths.pop() + 1
+            if items.__class__ is dict:
+                foreign.append("".join(items))
+                items = items.values()
+            before = len(waiting)
+            if depth > DEEPEST + 1 or not _sorted_out(items, foreign, waiting):
+                return False
+            depths.extend([depth] * (len(waiting) - before))
+        "".join(foreign).encode()
     except (TypeError, UnicodeEncodeError):  # a key that is no text, a lone surrogate
         return False
-    return all(map(math.isfinite, numbers))
+    return True
+
+
+def _sorted_out(items: Iterable[Any], foreign: list[str], waiting: list[Any]) -> bool:
+    """Tell whether items are plain; texts to look at and what holds more items are put aside."""
+    for item in items:
+        kind = item.__class__
+        if kind is str:
+            if not item.isascii():
+                foreign.append(item)
+        elif kind is dict or kind is list:
+            waiting.append(item)
+        elif kind is float:
+            if item - item != 0.0:  # infinite, or no number at all
+                return False
+        elif not _is_plain(item):
+            return False
+    return True
 
 
 def _check(value: object, depth: int) -> None:
@@ -106,12 +116,41 @@ def is_number_text(value: object) -> bool:
     return isinstance(value, str) and _NUMBER_TEXT.match(value) is not None
 
 
+def are_number_texts(values: Iterable[object]) -> bool:
+    """Tell whether all values are printed numbers."""
+    try:
+        return all(map(_NUMBER_TEXT.match, values))  # type: ignore[arg-type]
+    except TypeError:
+        return False
+
+
 def need(row: Mapping[str, Any], what: str, /, **kinds: type) -> None:
     """Refuse a row without the named fields of these kinds."""
     for name, kind in kinds.items():
         value = row.get(name)
         if not isinstance(value, kind) or (kind is not bool and isinstance(value, bool)):
             raise UserError(f"record: {what}: {name!r} is missing or not a {kind.__name__}")
+
+
+class Fields:
+    """Fields that a row must have, by name and kind; at least two.
+
+    >>> Fields(id=str, lines=list).need({"id": "B7", "lines": []}, "part")
+    """
+
+    def __init__(self, **kinds: type) -> None:
+        self._kinds = kinds
+        self._values = itemgetter(*kinds)
+        self._types = tuple(kinds.values())
+
+    def need(self, row: Mapping[str, Any], what: str) -> None:
+        """Refuse a row without these fields, as :func:`need` does."""
+        try:
+            if tuple(map(type, self._values(row))) == self._types:
+                return
+        except KeyError:
+            pass
+        need(row, what, **self._kinds)
 
 
 def check_texts(values: object, what: str) -> None:

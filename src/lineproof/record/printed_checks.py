@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 from decimal import Decimal
+from functools import lru_cache
 from typing import Any
 
 from lineproof.formula import parse_criterion
 from lineproof.formula.compiled import PLAIN_COMPARE
 from lineproof.quantity import read_quantity
-from lineproof.quantity.units import internal_factor, system_unit
+from lineproof.quantity.units import internal_factor, system_factor
 from lineproof.record.build import record_digest
 from lineproof.record.entry import (
     CHECK,
@@ -24,6 +25,13 @@ from lineproof.record.entry import (
     rested_on,
 )
 
+_MOST_KEPT = 8192
+"""Printed numbers that are kept as read: the same ones stand in many lines."""
+_LEAST_DIGITS = 3
+_LAST_BITS = 1e-9
+"""Relative difference that is nobody's to judge: the last bits of a value."""
+_NEARLY = 1e-5
+"""Distance from the limit, relative to it, above which floats are exact enough."""
 Data = Mapping[str, Any]
 Finding = tuple[str, str, str]
 """What differs, as stored, as it should be."""
@@ -35,14 +43,27 @@ def rounds_to(text: str, value: float) -> bool:
     >>> rounds_to("551", 550.8), rounds_to("552", 550.8), rounds_to("12300", 12345.0)
     (True, False, True)
     """
-    number = Decimal(text)
-    last = int(number.as_tuple().exponent)
-    if "." not in text and "e" not in text and number:
+    number, half, last = _read(text)
+    missed, room = abs(number - value), half + abs(value) * _LAST_BITS
+    if abs(missed - room) > room * _NEARLY:
+        return missed < room
+    # So near to the limit only decimals can tell.
+    exact = Decimal(value)
+    room_left = Decimal(5).scaleb(last - 1) + abs(exact) * Decimal(str(_LAST_BITS))
+    return abs(Decimal(text) - exact) <= room_left
+
+
+@lru_cache(maxsize=_MOST_KEPT)
+def _read(text: str) -> tuple[float, float, int]:
+    """Return a printed number, half a unit of its last digit, and the power of ten of that unit."""
+    mantissa, _, power = text.lstrip("-").partition("e")
+    whole, _, decimals = mantissa.partition(".")
+    last = int(power or 0) - len(decimals)
+    if not power and not decimals and whole != "0":
         # Zeros hold the place, but at least three digits are digits.
-        last = max(0, min(int(number.normalize().as_tuple().exponent), number.adjusted() - 2))
-    half = Decimal(5).scaleb(last - 1)
-    # The last bits of the value are nobody's to judge.
-    return abs(number - Decimal(value)) <= half + abs(Decimal(value)) * Decimal("1e-9")
+        zeros = len(whole) - len(whole.rstrip("0"))
+        last = max(0, min(zeros, len(whole) - _LEAST_DIGITS))
+    return float(text), float(f"5e{last - 1}"), last
 
 
 def printed_value(printed: Data, value: float) -> Iterator[Finding]:
@@ -66,10 +87,10 @@ def printed_typed(entry: Data) -> Iterator[Finding]:
 
 def printed_arguments(entry: Data, values: Mapping[str, float], units: Data) -> Iterator[Finding]:
     """Compare printed arguments with the values of the entries they stand for."""
-    system = entry.get("system", "N-mm")
+    system, args = entry.get("system", "N-mm"), entry["args"]
     for name, text in entry["printed"]["args"].items():
-        target = entry["args"][name]
-        again = values[target] / internal_factor(system_unit(units[target], system))
+        target = args[name]
+        again = values[target] / system_factor(units[target], system)
         if not rounds_to(text, again):
             yield f"print of {name}", text, f"{again:.10g}"
 
@@ -102,7 +123,10 @@ def digests(entries: Mapping[str, Data]) -> dict[str, str]:
     for entry_id, entry in entries.items():
         named = entry["kind"] in (LINE, FOUND, *CRITERIA)
         on = rested_on(
-            (name if named else "", made[target]) for name, target in entry.get("args", {}).items()
+            [
+                (name if named else "", made[target])
+                for name, target in entry.get("args", {}).items()
+            ]
         )
         made[entry_id] = digest_of(entry["kind"], entry["symbol"], *_pieces(entry), *on)
     return made

@@ -9,6 +9,7 @@ from typing import Any
 from lineproof.errors import UserError
 from lineproof.record.build import SCHEMA
 from lineproof.record.plain_data import json_text
+from lineproof.record.uncollected import uncollected
 from lineproof.record.validate import check_record
 
 MIME = "application/vnd.lineproof.record+json"
@@ -31,11 +32,12 @@ class Record:
         """Read a record; raises :class:`UserError` with everything that is wrong with it."""
         if len(text) > LARGEST_RECORD:
             raise UserError(f"record: larger than {LARGEST_RECORD // 1_000_000} MB; not read")
-        try:
-            data = json.loads(text, parse_constant=_refuse_constant)
-        except (ValueError, RecursionError) as error:
-            raise UserError(f"record: not readable as JSON ({str(error)[:80]})") from None
-        return cls.from_data(data)
+        with uncollected():
+            try:
+                data = json.loads(text, parse_constant=_refuse_constant)
+            except (ValueError, RecursionError) as error:
+                raise UserError(f"record: not readable as JSON ({str(error)[:80]})") from None
+            return cls.from_data(data)
 
     @classmethod
     def from_data(cls, data: object) -> Record:

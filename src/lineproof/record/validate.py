@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Mapping
+from functools import lru_cache
 from typing import Any, get_args
 
 from lineproof.errors import FaultList, UserError
@@ -23,6 +25,8 @@ from lineproof.record.entry import (
     VALUES,
 )
 from lineproof.record.plain_data import (
+    Fields,
+    are_number_texts,
     check_plain,
     check_texts,
     is_number,
@@ -34,7 +38,18 @@ from lineproof.record.validate_shown import FILES, check_placing, check_table
 
 Data = Mapping[str, Any]
 _KINDS = (*VALUES, *CRITERIA, FIGURE, NOTE, TABLE)
-_LONGEST_ID = 80
+_PIECE = re.compile(r"[A-Za-z0-9][A-Za-z0-9_-]{0,79}\Z")
+"""A key or a symbol in the id of an entry."""
+_MOST_KEPT = 8192
+_ENTRY = Fields(
+    id=str, kind=str, symbol=str, label=str, title=str, clause=str, basis=str, digest=str
+)
+_GIVEN = Fields(typed=str, source=str, printed=dict)
+_LOOKUP = Fields(table=str, row=str, source=str, printed=dict)
+_LINE = Fields(formula=str, args=dict, numbers=dict, system=str, printed=dict)
+_CRITERION = Fields(numbers=dict, system=str, conclusion=str)
+_COMPARISON = Fields(formula=str, args=dict, holds=bool, unit=str, printed=dict)
+_FOUND = Fields(procedure=dict, settings=dict, args=dict, closing=dict, printed=dict)
 _SYSTEMS = get_args(System)
 
 
@@ -120,10 +135,7 @@ class _Entries:
                 self.faults.take(error)
 
     def _check(self, entry: Data, key: str) -> None:
-        need(
-            entry, "entry", id=str, kind=str, symbol=str, label=str, title=str, clause=str,
-            basis=str, digest=str,
-        )  # fmt: skip
+        _ENTRY.need(entry, "entry")
         entry_id, kind, symbol = entry["id"], entry["kind"], entry["symbol"]
         if kind not in _KINDS or entry_id != f"{key}/{symbol}" or not _is_id(key, symbol):
             raise UserError(f"record: {entry_id[:80]!r} of kind {kind[:20]!r} is not an entry")
@@ -135,7 +147,9 @@ class _Entries:
         self.kinds[entry_id] = kind
         if kind in VALUES:
             check_id(symbol)
-            if not is_number(entry.get("value")) or entry.get("unit") not in [*UNITS]:
+            unit = entry.get("unit")
+            known = isinstance(unit, str) and unit in UNITS
+            if not known or not is_number(entry.get("value")):
                 raise UserError(f"record: {entry_id} has no finite value in a known unit")
         _CHECKS[kind](entry_id, entry)
         if kind == FOUND:
@@ -159,11 +173,12 @@ class _Entries:
         if not isinstance(args, dict):
             raise UserError(f"record: {entry_id}: 'args' is not a dict")
         for target in args.values():
-            if not isinstance(target, str) or target not in self.kinds:
+            kind = self.kinds.get(target) if isinstance(target, str) else None
+            if kind is None:
                 raise UserError(
                     f"record: {entry_id} rests on {shown(target)}, which does not stand before it"
                 )
-            if self.kinds[target] not in kinds:
+            if kind not in kinds:
                 raise UserError(f"record: {entry_id} rests on {target}, which is no value")
 
     def _file(self, entry_id: str, entry: Data, ending: str) -> None:
@@ -180,17 +195,16 @@ class _Entries:
 
 
 def _is_id(*pieces: str) -> bool:
-    return all(
-        piece.isascii()
-        and piece.replace("-", "").replace("_", "").isalnum()
-        and piece[0].isalnum()
-        and len(piece) <= _LONGEST_ID
-        for piece in pieces
-    )
+    return all(map(_is_piece, pieces))
+
+
+@lru_cache(maxsize=_MOST_KEPT)
+def _is_piece(text: str) -> bool:
+    return _PIECE.match(text) is not None
 
 
 def _given(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, typed=str, source=str, printed=dict)
+    _GIVEN.need(entry, entry_id)
     _printed_value(entry_id, entry["printed"], entry["unit"])
     if "typed" in entry["printed"]:
         _printed_value(
@@ -201,12 +215,12 @@ def _given(entry_id: str, entry: Data) -> None:
 
 
 def _lookup(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, table=str, row=str, source=str, printed=dict)
+    _LOOKUP.need(entry, entry_id)
     _printed_value(entry_id, entry["printed"], entry["unit"])
 
 
 def _line(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, formula=str, args=dict, numbers=dict, system=str, printed=dict)
+    _LINE.need(entry, entry_id)
     _, tree = parse_line(entry["formula"])
     _names(entry_id, entry, names_of(tree))
     printed = entry["printed"]
@@ -219,7 +233,7 @@ def _line(entry_id: str, entry: Data) -> None:
 
 
 def _criterion(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, numbers=dict, system=str, conclusion=str)
+    _CRITERION.need(entry, entry_id)
     _system(entry_id, entry)
     _comparison(entry_id, entry)
     if entry["kind"] != CHECK:
@@ -234,7 +248,7 @@ def _criterion(entry_id: str, entry: Data) -> None:
 
 
 def _comparison(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, formula=str, args=dict, holds=bool, unit=str, printed=dict)
+    _COMPARISON.need(entry, entry_id)
     left, _, right = parse_criterion(entry["formula"])
     _names(entry_id, entry, (*names_of(left), *names_of(right)))
     if not (is_number(entry.get("left")) and is_number(entry.get("right"))):
@@ -246,7 +260,7 @@ def _comparison(entry_id: str, entry: Data) -> None:
 
 
 def _found(entry_id: str, entry: Data) -> None:
-    need(entry, entry_id, procedure=dict, settings=dict, args=dict, closing=dict, printed=dict)
+    _FOUND.need(entry, entry_id)
     need(entry["procedure"], entry_id, name=str, version=int, title=str)
     if not all(is_number(value) for value in entry["settings"].values()):
         raise UserError(f"record: {entry_id}: a setting is not a number")
@@ -274,7 +288,7 @@ _CHECKS = {
 
 
 def _names(entry_id: str, entry: Data, names: tuple[str, ...]) -> None:
-    missing = set(names) ^ set(entry["args"])
+    missing = entry["args"].keys() ^ names
     if missing:
         raise UserError(
             f"record: {entry_id}: {min(missing)[:40]!r} is not both in its formula and its args"
@@ -283,9 +297,9 @@ def _names(entry_id: str, entry: Data, names: tuple[str, ...]) -> None:
 
 def _printed_args(entry_id: str, entry: Data) -> None:
     texts = entry["printed"].get("args")
-    if not isinstance(texts, dict) or set(texts) != set(entry["args"]):
+    if not isinstance(texts, dict) or texts.keys() != entry["args"].keys():
         raise UserError(f"record: {entry_id}: not every argument is printed")
-    if not all(is_number_text(text) for text in texts.values()):
+    if not are_number_texts(texts.values()):
         raise UserError(f"record: {entry_id}: a printed argument is not a number")
 
 
@@ -294,7 +308,7 @@ def _printed_value(entry_id: str, printed: Data, unit: str) -> None:
     if not is_number_text(text):
         raise UserError(f"record: {entry_id}: printed {shown(text)} is not a number")
     known = isinstance(shown_unit, str) and shown_unit in UNITS and unit in UNITS
-    if not known or UNITS[str(shown_unit)].kind != UNITS[unit].kind:
+    if not known or (shown_unit != unit and UNITS[str(shown_unit)].kind != UNITS[unit].kind):
         raise UserError(f"record: {entry_id}: {shown(shown_unit)} is not a unit of its kind")
 
 
