@@ -28,7 +28,7 @@ def sheet_with(**typed: str) -> Sheet:
     sheet = Sheet("B9", "Beam B9", project={"codes": {"pair": CODES["pair"]}})
     sheet.notation, sheet.codes = NOTATION, dict(CODES)
     with sheet.part("inputs", "Inputs"):
-        for symbol, text in (INPUTS | typed).items():
+        for symbol, text in (dict(INPUTS) | typed).items():
             sheet.given(symbol, text, source="drawing S-501")
     return sheet
 

@@ -56,35 +56,23 @@ def own_givens(scope: Scope) -> Iterator[Finding]:
 
 
 def _again(node: Node, scope: Scope) -> Iterator[Finding]:
-    """Tell a value that stands elsewhere in the calculation already."""
-    others = [n for n in scope.by_symbol[node.symbol] if n.part != node.part]
-    if node.symbol not in SHARED or not others:
+    """Tell a value that stands before it in the calculation already."""
+    before = [n for n in scope.by_symbol[node.symbol] if scope.order[n.id] < scope.order[node.id]]
+    if node.symbol not in SHARED or not before:
         return
-    first = others[0]
-    if not all(close(other.stored, first.stored) for other in others):
+    first = before[0]
+    if not all(close(other.stored, first.stored) for other in before):
         return
-    if close(first.stored, node.stored):
-        # The later of two that agree is told once.
-        if _order(scope, first) < _order(scope, node):
-            yield finding(
-                Severity.OBSERVATION,
-                f"{name_of(node)}: {node.symbol} = {printed(node)} is typed a second time, it "
-                f"stands at {name_of(first)}",
-                [node.id, first.id],
-                advice="use the line that stands, so that a change is made in one place",
-            )
-    else:
-        yield finding(
-            Severity.MAJOR,
-            f"{name_of(node)}: {node.symbol} is typed {printed(node)}, but {printed(first)} stands "
-            f"at {name_of(first)}",
-            [node.id, first.id],
-            advice="one of the two is out of date; use one line for both",
-        )
-
-
-def _order(scope: Scope, node: Node) -> int:
-    return list(scope.graph.nodes).index(node.id)
+    same = close(first.stored, node.stored)
+    what = f"{name_of(node)}: {node.symbol} is typed {printed(node)}"
+    yield finding(
+        Severity.OBSERVATION if same else Severity.MAJOR,
+        f"{what}, as it stands at {name_of(first)} already"
+        if same
+        else f"{what}, but {printed(first)} stands at {name_of(first)}",
+        [node.id, first.id],
+        advice="use one line for both, so that a change is made in one place",
+    )
 
 
 def _constant(node: Node) -> Iterator[Finding]:

@@ -35,6 +35,11 @@ class Scope:
                 found.setdefault(node.symbol, []).append(node)
         return {symbol: tuple(nodes) for symbol, nodes in found.items()}
 
+    @cached_property
+    def order(self) -> Mapping[str, int]:
+        """The place of every line in the record."""
+        return {entry_id: place for place, entry_id in enumerate(self.graph.nodes)}
+
     def find(self, name: str, part: str, args: Mapping[str, str] | None = None) -> Node | None:
         """Return what a name stands for: an argument, a line of the part, the only one there is."""
         if args and name in args:
