@@ -127,7 +127,7 @@ def _strengths(view: View) -> Iterator[Remark]:
     for symbol, what in (("f_c", "strength of the concrete"), ("f_y", "strength of the bars")):
         typed = [n for n in view.values(symbol) if n.kind in (GIVEN, LOOKUP)]
         values = {view.graph.stored[node.id] for node in typed}
-        if len(values) > 1:
+        if view.is_one_member and len(values) > 1:
             yield Remark(
                 f"The {what} stands with {len(values)} values: "
                 + ", ".join(f"{value:g} MPa" for value in sorted(values)),
@@ -194,7 +194,7 @@ def _typed(entry: dict[str, object]) -> bool:
 def _header(view: View) -> Iterator[Remark]:
     project, calc = view.record.data["project"], view.record.calc_id
     places = [row.get("calc") for row in project.get("locations", [])]
-    if places and calc not in places:
+    if view.member.spans and places and calc not in places:
         yield Remark(
             f"The project tells places of {', '.join(map(str, places))}, not of {calc}",
             "Look at the header: it may be that of an older job.",

@@ -13,6 +13,7 @@ from lineproof.audit.traps_view import (
     Trap,
     View,
     close,
+    has,
     is_name,
     names,
     numbers,
@@ -46,8 +47,7 @@ def _flange_at_support(view: View) -> Iterator[Caught]:
 
 def _web_at_midspan(view: View) -> Iterator[Caught]:
     """Look at stiffness only: there a flange left out is no longer on the safe side of anything."""
-    flange = next(view.values("b_f"), None)
-    if flange is None:
+    if not view.is_one_member or next(view.values("b_f"), None) is None:
         return
     for node in view.lines("kd", "I_cr"):
         target = view.target(node, "b")
@@ -176,31 +176,22 @@ def _overhang_counted(view: View) -> Iterator[Caught]:
 def _factors(view: View) -> Iterator[Caught]:
     """Scale φ_c and φ_s together: a factored resistance follows them once."""
     factors = {node.id: view.graph.stored[node.id] for node in view.values("phi_c", "phi_s")}
-    worked = view.graph.worked({i: value * _SCALE for i, value in factors.items()}).values
+    before = view.graph.worked(factors).values
+    after = view.graph.worked({i: value * _SCALE for i, value in factors.items()}).values
     for node in {node.id: node for node in _resistances(view)}.values():
         above = view.above(node)
         if _member_factor(node, above):
             what = "a factor of the member stands beside φ_c and φ_s"
-            yield Caught(
-                node,
-                what,
-                "φ_c and φ_s are factors of the materials; A23.3 has no other.",
-                clause="8.4",
-            )
-        stored = view.graph.stored[node.id]
-        ratio = worked[node.id] / stored if stored else _SCALE
+            advice = "φ_c and φ_s are factors of the materials; A23.3 has no other."
+            yield Caught(node, what, advice, clause="8.4")
+        ratio = after[node.id] / before[node.id] if before[node.id] else _SCALE
         if close(ratio, _SCALE**2, 1e-4) and "a_t" not in {other.symbol for other in above}:
             what = "the resistance factors are applied twice"
             yield Caught(node, what, "φ_c and φ_s belong to the materials, once.", clause="8.4")
-        if close(ratio, 1.0, 1e-4) and not _typed_factors(node, above):
+        if close(ratio, 1.0, 1e-4) and not has(node, 0.65, 0.85):
             what = "no resistance factor stands in it: a nominal resistance"
-            yield Caught(
-                node,
-                what,
-                "Compare the factored resistance with M_f or V_f.",
-                Severity.CRITICAL,
-                "8.4",
-            )
+            advice = "Compare the factored resistance with M_f or V_f."
+            yield Caught(node, what, advice, Severity.CRITICAL, "8.4")
 
 
 def _resistances(view: View) -> Iterator[Node]:
@@ -219,11 +210,6 @@ def _member_factor(node: Node, above: list[Node]) -> bool:
     typed = bool(numbers(node) & {0.9, 0.75}) and bool(names(node) & {"phi_c", "phi_s"})
     named = any(_MEMBER_FACTOR.fullmatch(other.symbol) for other in above)
     return named or typed
-
-
-def _typed_factors(node: Node, above: list[Node]) -> bool:
-    """Tell whether the factors are typed as numbers in the formulas of a resistance."""
-    return any(numbers(line) & {0.65, 0.85} for line in (node, *above))
 
 
 def _yield_limit(view: View) -> Iterator[Caught | Remark]:
@@ -287,7 +273,7 @@ def _compression_bars(view: View) -> Iterator[Caught]:
                 node, "yield of the bars in compression is assumed", advice, clause="10.1.2"
             )
     forces = list(view.lines("C_s"))
-    if len({"alpha_1" in names(node) for node in forces}) > 1:
+    if view.is_one_member and len({"alpha_1" in names(node) for node in forces}) > 1:
         node = next(node for node in forces if "alpha_1" not in names(node))
         yield Caught(
             node,

@@ -73,6 +73,11 @@ class View:
         return member_of(self.record)
 
     @cached_property
+    def is_one_member(self) -> bool:
+        """Tell whether all its lines are of one member: a collection of cases may differ."""
+        return bool(self.member.flow)
+
+    @cached_property
     def titles(self) -> dict[str, str]:
         """The titles of the parts by key."""
         return {part["key"]: part["title"] for part in self.record.parts}

@@ -1,0 +1,117 @@
+"""Traps of section and shear: each rule is set off by a line that fell into it, and by no other."""
+
+from __future__ import annotations
+
+from functools import cache
+
+import pytest
+
+from lineproof.audit.data import Finding, Severity
+from lineproof.audit.slip_kinds import FAMILIES
+from lineproof.audit.traps import COVERED_BY, SLIP, TRAPS, trap_findings, traps_met
+from lineproof.audit.traps_view import Trap
+
+from .altered import NAMES, changed, demo
+from .trap_cases import SECTION, SHEAR, STIRRUPS, Case
+from .trap_cases_service import LAID, LOADS, SERVICE, WHOLE
+from .trap_sheets import SHEETS
+
+CASES = (*SECTION, *SHEAR, *STIRRUPS, *LOADS, *WHOLE, *SERVICE, *LAID, *SHEETS)
+
+
+@cache
+def met(case: Case) -> list[tuple[Trap, Finding]]:
+    """Return what is found of a case, with the rules that found it."""
+    return [(trap, f) for trap, f in traps_met(case.record()) if case.said in f.what]
+
+
+@pytest.mark.parametrize("name", NAMES)
+def test_no_false_alarm_in_the_demo_calcs(name: str) -> None:
+    assert trap_findings(demo(name)) == ()
+
+
+@pytest.mark.parametrize("case", CASES, ids=lambda case: f"{case.number} {case.said[:50]}")
+def test_a_line_in_a_trap_is_found(case: Case) -> None:
+    found = met(case)
+
+    assert {trap.number for trap, _ in found} == {case.number}
+    assert all(finding.clause and finding.advice for _, finding in found)
+    if case.entry_id:
+        assert case.entry_id in {entry_id for _, finding in found for entry_id in finding.ids}
+
+
+def test_every_rule_is_set_off_by_a_case() -> None:
+    names = {
+        (trap.number, trap.name)
+        for case in CASES
+        for trap, _ in met(case)
+        if trap.number == case.number
+    }
+
+    assert names == {(trap.number, trap.name) for trap in TRAPS}
+
+
+def test_every_trap_of_the_list_has_a_rule_or_a_search_that_finds_it() -> None:
+    """The list of traps has 32 numbers."""
+    ruled = {trap.number for trap in TRAPS} | {number for number, _ in COVERED_BY}
+
+    assert ruled == set(range(1, 33))
+
+
+def test_what_the_slip_finder_covers_it_knows() -> None:
+    kinds = {family.kind for family in FAMILIES.values()}
+    named = {how.removeprefix(SLIP) for how in COVERED_BY.values() if how.startswith(SLIP)}
+
+    assert named <= kinds
+    assert set(COVERED_BY.values()) - {f"{SLIP}{kind}" for kind in kinds} == {"drawing", "missing"}
+
+
+def test_a_trap_that_hides_a_failing_check_is_critical() -> None:
+    """With the flange at support 2: a = 0.85 x 1800 x 400/(0.802 x 0.65 x 32 x 2220) = 16.53 mm.
+
+    M_r = 612000 x (568.95 - 16.53/2) = 343.1 kN.m. Against 330 kN.m it holds; with the web,
+    a = 96.55 mm and M_r = 318.7 kN.m, it does not: 330/343.1 = 0.962, 330/318.7 = 1.036.
+    """
+    wrong = changed(demo("floor-beam"), "hog-2-left/M_f", value=330.0)
+    wrong = changed(wrong, "hog-2-left/a", args={"b": "span-2/b_f"}, value=16.526)
+    wrong = changed(wrong, "hog-2-left/M_r", value=343.14)
+
+    (finding,) = trap_findings(wrong)
+    strength = next(e for e in finding.effects if e.check == "hog-2-left/strength")
+
+    assert finding.severity == Severity.CRITICAL
+    assert finding.what == (
+        "Depth of the stress block, width b, support 2, left face (14.21): the width of the flange "
+        "is used in negative moment."
+    )
+    assert strength.claimed == pytest.approx(330 / 343.14, rel=1e-3)
+    assert strength.right == pytest.approx(330 / 318.655, rel=1e-4)
+    assert strength.sentence.endswith(
+        "utilisation from 0.96 as recorded to 1.04 put right, no longer holds"
+    )
+
+
+def test_a_trap_without_effect_keeps_its_own_weight() -> None:
+    """λ is 1 for normal density: the line is right by number, and the formula is not."""
+    case = next(case for case in STIRRUPS if case.entry_id == "materials/f_r")
+
+    (finding,) = trap_findings(case.record())
+
+    assert finding.severity == Severity.OBSERVATION
+    assert finding.effects == ()
+
+
+def test_one_leg_for_two_is_told_with_the_resistance_put_right() -> None:
+    """V_s counts 100 mm2 where the stirrups have 200: put right it is twice as large."""
+    right = demo("floor-beam")
+    V_s = float(right.entries["shear-2-left/V_s"]["value"])
+    V_c = float(right.entries["shear-2-left/V_c"]["value"])
+    V_f = float(right.entries["shear-2-left/V_f"]["value"])
+    wrong = changed(right, "shear-2-left/V_s", args={"A_v": "stirrups/A_t"}, value=V_s / 2)
+    wrong = changed(wrong, "shear-2-left/V_r", value=V_c + V_s / 2)
+
+    (finding,) = trap_findings(wrong)
+    strength = next(e for e in finding.effects if e.check == "shear-2-left/shear-strength")
+
+    assert strength.claimed == pytest.approx(V_f / (V_c + V_s / 2), rel=1e-9)
+    assert strength.right == pytest.approx(V_f / (V_c + V_s), rel=1e-9)
