@@ -75,9 +75,17 @@ class Desk {
     if (focus) {
       line.element.tabIndex = -1;
       line.element.focus({ preventScroll: true });
-      line.element.scrollIntoView({ block: "nearest" });
+      this.bringIn(line);
     }
     this.tell(line);
+  }
+
+  // Brings a line onto the screen; again when those around it have been laid out.
+  bringIn(line) {
+    line.element.scrollIntoView({ block: "nearest" });
+    requestAnimationFrame(() => requestAnimationFrame(() => {
+      if (this.work.line === line) line.element.scrollIntoView({ block: "nearest" });
+    }));
   }
 
   tell(line) {
@@ -118,7 +126,7 @@ class Desk {
     const words = FILTERS.find(([key]) => key === filter)[1];
     this.panel.say(shown ? `${words}: ${shown.size} lines shown.` : "All lines shown.");
     const { line } = this.work;
-    if (line?.element && (!shown || shown.has(line))) line.element.scrollIntoView({ block: "nearest" });
+    if (line?.element && (!shown || shown.has(line))) this.bringIn(line);
   }
 
   deepen(way, depth) {

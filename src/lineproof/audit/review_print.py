@@ -7,6 +7,7 @@ from itertools import groupby
 
 from lineproof.audit.review import Mark, Raised, Review, Said, SignOff, State, in_order
 from lineproof.audit.review_marks import Stale, Standing, standing
+from lineproof.audit.review_merge import Conflict
 from lineproof.package.reviewed import (
     Lines,
     PartTally,
@@ -34,7 +35,7 @@ def printed_review(review: Review, record: Record) -> PrintedReview:
         tallies=tuple(words.tallies()),
         findings=tuple(words.finding(each) for each in review.findings),
         stale=tuple(words.stale()),
-        conflicts=tuple(each.sentence for each in words.stands.conflicts),
+        conflicts=tuple(words.conflict(each) for each in words.stands.conflicts),
         signed=tuple(words.signed(each) for each in review.signed),
         checked_by=words.checked_by(),
         notes=words.notes(),
@@ -131,6 +132,14 @@ class _Words:
             for line in stale.causes
         )
         return f"{named[:1].upper()}{named[1:]}: changed."
+
+    def conflict(self, each: Conflict) -> str:
+        """Say what does not agree, a line by its number and title."""
+        entry = self.record.entries.get(each.what)
+        if entry is None:
+            return each.sentence
+        name = f"{entry['label']} {entry.get('title') or ''}".strip() or each.what
+        return f"{name}: {each.sentence.removeprefix(f'{each.what}: ')}"
 
     def signed(self, each: SignOff) -> str:
         told = f"Signed off by {each.by} on {each.on} for the record {each.record}"
