@@ -260,3 +260,28 @@ def test_a_records_own_values_rounded_agree(name: str, digits: int, part: float,
             claims.append(typed(graph, node.id, text))
     wrong = [j for j in judge(graph, claims) if j.claim and j.verdict is not Verdict.AGREES]
     assert wrong == []
+
+
+def test_an_area_not_changed_with_the_count_of_bars(record: Record) -> None:
+    """Five bars claimed with the area of four: A_s = 1200 does not follow from n_b = 5."""
+    said = judged(record, {"given/n_b": "5", "beam/A_s": "1200", "strength/M_r": "206.6"})
+    assert said["given/n_b"].verdict is Verdict.INPUT
+    assert said["beam/A_s"].verdict is Verdict.ORIGIN
+    assert "not changed with n_b" in said["beam/A_s"].note
+    assert said["strength/M_r"].verdict is Verdict.AGREES
+
+
+def test_an_input_written_wrongly_while_all_was_worked_with_the_right_one(record: Record) -> None:
+    """f_y written 500; a = 65.0 and M_r = 206.6 were both worked with 400: one finding, at f_y."""
+    said = judged(record, {"given/f_y": "500 MPa", "beam/a": "65.0", "strength/M_r": "206.6"})
+    found = {entry_id: each.verdict for entry_id, each in said.items()}
+    assert found == {
+        "given/f_y": Verdict.INPUT, "beam/a": Verdict.AGREES, "strength/M_r": Verdict.AGREES,
+    }  # fmt: skip
+
+
+def test_a_number_as_long_as_the_right_one_is_no_rounding() -> None:
+    """l_w = 3000 - 380 = 2620: 2650 stands on a step of 50 but says as much; 2600 is a rounding."""
+    record = sheet_of({"l_w = s_b - b_w": "mm"}, {"s_b": "3 m", "b_w": "380 mm"}).close()
+    assert verdicts(record, {"beam/l_w": "2650 mm"})["beam/l_w"] is Verdict.ORIGIN
+    assert verdicts(record, {"beam/l_w": "2600 mm"})["beam/l_w"] is Verdict.SAFE_ROUNDING

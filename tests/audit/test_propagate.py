@@ -13,7 +13,7 @@ from tests.audit.hand import beam, sheet_of, typed
 
 from lineproof.audit.data import Interval
 from lineproof.audit.graph import Graph
-from lineproof.audit.propagate import Form, Worker, claimed_form, combined
+from lineproof.audit.propagate import Form, Function, Worker, claimed_form, combined
 
 X = claimed_form("x", Interval(9.0, 11.0))
 Y = claimed_form("y", Interval(4.0, 6.0))
@@ -42,9 +42,9 @@ def test_what_rests_on_the_same_number_moves_together() -> None:
         (lambda x, y: math.sqrt(x) * y**2, 3 * 16, math.sqrt(11) * 36),
     ],
 )
-def test_the_ends_of_functions_lie_inside(function: object, low: float, high: float) -> None:
+def test_the_ends_of_functions_lie_inside(function: Function, low: float, high: float) -> None:
     """The exact ends are found at corners; a kink at the middle may widen them by half."""
-    got = ends(combined(function, [X, Y]))  # type: ignore[arg-type]
+    got = ends(combined(function, [X, Y]))
     assert got[0] <= low + 1e-9
     assert got[1] >= high - 1e-9
     assert got[1] - got[0] <= 1.55 * (high - low)
@@ -71,14 +71,14 @@ def test_no_choice_of_values_leaves_the_interval(seed: int, coarse: float) -> No
         assert interval.holds(exact)
 
 
-_STEPS = [
+_STEPS: list[Function] = [
     lambda a, b: a * b, lambda a, b: a + b, lambda a, b: a / (1 + b), max,
     lambda a, b: min(a, 2 * b), lambda a, b: a**2 + b, lambda a, b: math.sqrt(abs(a + b)),
     lambda a, b: abs(a - b), lambda a, b: a - b / 3,
 ]  # fmt: skip
 
 
-def _chain(steps: list, forms: list[Form]) -> Interval:  # type: ignore[type-arg]
+def _chain(steps: list[Function], forms: list[Form]) -> Interval:
     first = combined(lambda a, b: float(steps[0](a, b)), forms[:2])
     second = combined(lambda a, b: float(steps[1](a, b)), [first, forms[2]])
     return combined(lambda a, b: float(steps[2](a, b)), [second, first]).interval

@@ -3,15 +3,16 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Container, Iterator, Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.other_methods import Bench, other_ways
-from lineproof.audit.propagate import Form, Worker, World, claimed_form
+from lineproof.audit.propagate import Form, Worker, claimed_form
 from lineproof.audit.readings import Rounded, coarse_rounding, unit_slip
 from lineproof.audit.twins import twins_of
+from lineproof.audit.worlds import Worlds, unmoved_lines
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
 from lineproof.record.entry import DECISION
@@ -41,15 +42,6 @@ def judge(
     return tuple(_Judge(graph, claims, find).all())
 
 
-@dataclass(frozen=True, slots=True)
-class _Worlds:
-    """The record worked with values as claimed, with wrong ones put right, and with twins."""
-
-    claimed: World
-    sound: World
-    twin: World
-
-
 class _Judge:
     """One run of judging; what has been judged so far decides what later claims carry."""
 
@@ -63,6 +55,7 @@ class _Judge:
         if self.worlds.sound is not self.worlds.claimed:
             worlds.append(self.worlds.sound)
         self.benches = [Bench(self.worker, w, frozenset(self.claims)) for w in worlds]
+        self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
@@ -89,7 +82,7 @@ class _Judge:
         stored = self.graph.stored
         return [c for c in self.claims.values() if not c.stands_for.holds(stored[c.id])]
 
-    def _worlds(self) -> _Worlds:
+    def _worlds(self) -> Worlds:
         deviating = self._deviating()
         stands = {claim.id: self._stands(claim) for claim in self.claims.values()}
         needed = set(self.claims) | set(self.graph.above(self.claims))
@@ -98,7 +91,7 @@ class _Judge:
         sound = self.worker.world(stands | right, needed, claimed) if deviating else claimed
         copies = {copy: stands[claimed_id] for copy, claimed_id in self.twins.items()}
         twin = self.worker.world(stands | copies, needed, claimed) if copies else claimed
-        return _Worlds(claimed, sound, twin)
+        return Worlds(claimed, sound, twin)
 
     def _stands(self, claim: Claim) -> Form:
         node, right = self.graph[claim.id], self.graph.stored[claim.id]
@@ -139,27 +132,37 @@ class _Judge:
         return replace(made, verdict=Verdict.INPUT, note=said)
 
     def _line(self, node: Node, claim: Claim) -> Judged:
-        worlds, right = self.worlds, self.graph.stored[node.id]
+        worlds, right, stands = self.worlds, self.graph.stored[node.id], claim.stands_for
         follows = worlds.claimed.follows[node.id].interval
         made = Judged(node.id, Verdict.AGREES, claim, follows, right)
-        stands = claim.stands_for
-        by_used, by_sound = stands.meets(follows), stands.meets(self._sound(node))
-        if stands.holds(right) or (by_used and by_sound):
-            note = "" if by_used else "right, though it does not follow from the values claimed"
-            return replace(made, note=note)
+        is_right, by_used = stands.holds(right), stands.meets(follows)
+        by_sound = stands.meets(worlds.sound.follows[node.id].interval)
+        if by_used and (by_sound or is_right):
+            return made
+        if not by_used and (by_sound or is_right):
+            return self._right_alone(node, claim, made)
         if node.id in worlds.claimed.failed:
             why = worlds.claimed.failed[node.id]
             note = f"cannot be worked with the values claimed ({why})"
             return replace(made, verdict=Verdict.UNKNOWN, note=note)
         if by_used or stands.meets(worlds.twin.follows[node.id].interval):
             return self._carried(node, made)
-        if by_sound:
-            note = "follows from the right values, not from all those claimed"
-            return replace(made, note=note)
         return self._unexplained(node, claim, made)
 
-    def _sound(self, node: Node) -> Interval:
-        return self.worlds.sound.follows[node.id].interval
+    def _right_alone(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        """Judge a line that is right, or follows from right values, but not from those claimed."""
+        if node.id in self.unmoved:
+            return self._not_changed_with(node, claim, made)
+        note = "right, though it does not follow from the values claimed"
+        if not claim.stands_for.holds(made.right):
+            note = "follows from the right values, not from all those claimed"
+        return replace(made, note=note)
+
+    def _not_changed_with(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        """Judge a line that kept the value of the recorded input while its input was changed."""
+        inputs = self._named(self.unmoved[node.id])
+        note = f"is the value for other inputs than claimed: not changed with {inputs}"
+        return replace(made, verdict=Verdict.ORIGIN, note=note, slips=self._slips(node, claim))
 
     def _carried(self, node: Node, made: Judged) -> Judged:
         causes = self._causes(node)
@@ -171,7 +174,7 @@ class _Judge:
         return replace(made, note=note, causes=causes)
 
     def _unexplained(self, node: Node, claim: Claim, made: Judged) -> Judged:
-        around = [made.follows, self._sound(node)]
+        around = [made.follows, self.worlds.sound.follows[node.id].interval]
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))

@@ -31,8 +31,9 @@ _MODULI = ("E_c = 4500*sqrt(f_c)", "E_c = (3300*sqrt(f_c) + 6900)*(gamma_c/2300)
 """A23.3, 8.6.2.3 and 8.6.2.2."""
 _MODULUS_CONCRETE = 40.0
 _WIDTHS = ("b", "b_f", "b_w")
-_TABLE_DIGITS = 2
-"""Digits to which a table of K_r is read by hand."""
+_TABLE_DECIMALS = 1
+_LEAST_READ = 1.0
+"""A table of K_r [MPa] is read by hand to a tenth, which is two digits from 1 up."""
 _RATIO_DECIMALS = 4
 """Decimals to which tables give a ratio of reinforcement."""
 _ROUNDING = 1e-9
@@ -207,18 +208,19 @@ def _midspan_inertia(bench: Bench, node: Node) -> Iterator[Other]:
 
 def _table_resistance(bench: Bench, node: Node) -> Iterator[Other]:
     """M_r = K_r b d^2 with K_r read from a table to two digits."""
-    if not node.symbol.startswith("M_r") or node.unit not in ("kN.m", "N.mm", "kip.ft", "kip.in"):
+    if node.symbol != "M_r" or node.unit not in ("kN.m", "N.mm", "kip.ft", "kip.in"):
         return
     width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
     if width is None or depth is None:
         return
     scale = combined(lambda b, d: b * d**2, [width, depth])
     factor = combined(lambda m, s: m / s, [bench.world.follows[node.id], Form(scale.middle)])
-    for read in _readings(factor.interval, _TABLE_DIGITS):
-        yield Other(
-            f"follows with K_r read from a table as {read:g} (two digits) in M_r = K_r b d2",
-            scale.interval.times(read),
-        )
+    for read in _readings(factor.interval, _TABLE_DECIMALS):
+        if read >= _LEAST_READ:
+            yield Other(
+                f"follows with K_r read from a table as {read:g} (two digits) in M_r = K_r b d2",
+                scale.interval.times(read),
+            )
 
 
 def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
@@ -230,7 +232,7 @@ def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
         return
     area = combined(lambda b, d: b * d, [width, depth])
     ratio = combined(lambda a, s: a / s, [bench.world.follows[node.id], Form(area.middle)])
-    for read in _readings(ratio.interval, -_RATIO_DECIMALS):
+    for read in _readings(ratio.interval, _RATIO_DECIMALS):
         if read >= 10 ** (1 - _RATIO_DECIMALS):  # two digits at least
             yield Other(
                 f"follows with the ratio read from a table as {read:g} in A_s = rho b d",
@@ -238,10 +240,10 @@ def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
             )
 
 
-def _readings(interval: Interval, digits: int) -> tuple[float, ...]:
-    """Return a table's readings of a number that may lie anywhere in an interval."""
+def _readings(interval: Interval, decimals: int) -> tuple[float, ...]:
+    """Return a table's readings, to so many decimals, of a number somewhere in an interval."""
     ends = (interval.low * (1 - _ROUNDING), interval.middle, interval.high * (1 + _ROUNDING))
-    return tuple(dict.fromkeys(float(significant(end, digits)) for end in ends))
+    return tuple(dict.fromkeys(float(significant(end, -decimals)) for end in ends))
 
 
 def _coefficients(bench: Bench, node: Node) -> Iterator[Other]:

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from decimal import Decimal
 
 from lineproof.audit.data import Claim, Interval, Slip
+from lineproof.quantity.digits import significant
 from lineproof.quantity.units import UNITS, internal_factor, units_of_kind
 
 _MOST_POWER = 9
@@ -18,6 +19,7 @@ _COARSE = (5, 10, 25, 50, 100)
 """Steps in units of the last digit to which a practitioner rounds lengths and areas."""
 _COARSE_ELSEWHERE = (10,)
 _BUILT = ("length", "area")
+_EXACT_DIGITS = 6
 _FARTHEST = 0.025
 """Part of a value by which a rounding may move it; beyond it is no rounding."""
 
@@ -67,13 +69,19 @@ def coarse_rounding(claim: Claim, follows: Iterable[Interval]) -> Rounded | None
     for interval in follows:
         of = interval.middle
         away = abs(claim.value - of)
-        if not of or away > _FARTHEST * abs(of):
+        if not of or away > _FARTHEST * abs(of) or not _is_simpler(number, of, claim.unit):
             continue
         for count in (1, *coarse):
             step = unit * count
             if number % step == 0 and away < float(step) * internal_factor(claim.unit):
                 return Rounded(of, f"{step.normalize():f}", abs(claim.value) > abs(of))
     return None
+
+
+def _is_simpler(number: Decimal, of: float, unit: str) -> bool:
+    """Tell whether a number has fewer digits than what it rounds: 2650 is no rounding of 2620."""
+    exact = significant(of / internal_factor(unit), _EXACT_DIGITS).normalize()
+    return len(number.normalize().as_tuple().digits) < len(exact.as_tuple().digits)
 
 
 def _last_digit(claim: Claim) -> Decimal:
