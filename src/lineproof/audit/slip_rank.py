@@ -15,7 +15,9 @@ MOST = 8
 """So many slips of one line are told."""
 LEAST_LIKELY = 2e-4
 """Below this share a fit is as good as chance, and is not told."""
-SELECTED = frozenset(("pair", "edition", "factor"))
+SELECTED = frozenset((
+    "pair", "edition", "factor", "legs", "bar count", "diameter", "tributary", "clear span",
+))  # fmt: skip
 """Families of edits that are each known from practice: each keeps more than an even part."""
 AGAIN = 0.5
 """Each further slip of a kind counts so much less than the one before."""
@@ -38,7 +40,7 @@ class Fit(NamedTuple):
 def shares(edits: Sequence[Edit]) -> dict[str, float]:
     """Return the share of one edit of each family: the family's share over its different values."""
     different = Counter(
-        family for family, _ in {(edit.family, f"{edit.value:.9g}") for edit in edits}
+        family for family, _, _ in {(edit.family, edit.at, edit.value) for edit in edits}
     )
     return {
         family: FAMILIES[family].share / count ** (0.5 if family in SELECTED else 1.0)

@@ -7,10 +7,12 @@ from collections.abc import Iterator
 from functools import partial
 
 from lineproof.audit.data import Claim, read_from
-from lineproof.audit.slip_bindings import others_for, shown, ways_of_units
 from lineproof.audit.slip_digits import changed, swapped, written
 from lineproof.audit.slip_edits import TOP, Edit, Line, words_of
+from lineproof.audit.slip_quantities import shown
 from lineproof.audit.slip_scope import LOADS, is_next
+from lineproof.audit.slip_units import ways_of_units
+from lineproof.audit.slip_values import others_for
 from lineproof.errors import UserError
 from lineproof.quantity.units import internal_factor
 
@@ -31,8 +33,9 @@ def edits_of_result(line: Line) -> Iterator[Edit]:
     yield from _rows(line)
     yield from _moments(line)
     for other in others_for(line, line.node.id):
-        if other.family in OWN and not (other.family == "factored" and line.node.tree is None):
-            yield Edit(other.family, TOP, other.value, other.half, other.words, other.far)
+        if other.family in OWN and not (other.family == "factored" and not line.node.is_computed):
+            family = "result factored" if other.family == "factored" else other.family
+            yield Edit(family, TOP, other.value, other.half, other.words, other.far)
     yield from _factored(line)
 
 

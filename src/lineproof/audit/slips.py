@@ -8,12 +8,13 @@ from dataclasses import dataclass, field
 
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.slip_bindings import edits_of_arguments, edits_of_bindings, others_for
+from lineproof.audit.slip_bindings import edits_of_arguments, edits_of_bindings
 from lineproof.audit.slip_carry import Carrier, Onward, fitting, reach_of
 from lineproof.audit.slip_edits import TOP, Edit, Line, edits_of, words_of
 from lineproof.audit.slip_rank import Fit, ranked, shares
 from lineproof.audit.slip_scope import Pairs, Scope, scope_of
 from lineproof.audit.slip_tree import FAILURES, Pair, Places
+from lineproof.audit.slip_values import others_for
 from lineproof.audit.slip_whole import edits_of_copy, edits_of_result
 from lineproof.errors import UserError
 
