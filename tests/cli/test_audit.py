@@ -11,7 +11,9 @@ from typing import Any
 
 import pytest
 from openpyxl import load_workbook
+from tests.audit import hand
 from tests.audit.hand import beam as hand_beam
+from tests.beams import gallery
 
 from lineproof.cli import main
 from lineproof.cli.audit import picked
@@ -85,8 +87,6 @@ def test_findings_come_by_what_they_matter(
 
 def test_a_claim_that_hides_a_failing_check_is_critical(tmp_path: Path, capsys: Capture) -> None:
     """M_f = 60 x 36/8 = 270 > 206.6: fails; with w_f = 40 claimed it would hold."""
-    from tests.audit import hand  # noqa: PLC0415 - its givens are changed here
-
     sheet = hand.sheet_of(givens=hand.GIVENS | {"w_f": "60 kN/m"})
     with sheet.part("checks", "Span 1: checks"):
         sheet.check("M_f <= M_r", key="strength", title="Moment resistance")
@@ -119,13 +119,13 @@ def test_a_blank_is_written_once(
 ) -> None:
     path = tmp_path / "blank.csv"
     assert audit(record_file, option, path) == 0
-    assert "fill in the column 'claimed'" in capsys.readouterr().out
+    assert "fill in the column 'claimed', then give it as --claims" in capsys.readouterr().out
     rows = list(csv.reader(path.read_text(encoding="utf-8-sig").splitlines()))
     assert rows[0] == ["id", "label", "place", "symbol", "title", "unit", "claimed", "where"]
     assert len(rows) - 1 == count
     path.write_text("filled in by hand")
     assert audit(record_file, option, path) == 2
-    assert "exists already and may hold claims" in capsys.readouterr().err
+    assert "exists already and may be filled in" in capsys.readouterr().err
     assert path.read_text() == "filled in by hand"
 
 
@@ -243,3 +243,45 @@ def test_nothing_of_a_file_is_run(record_file: Path, tmp_path: Path) -> None:
     assert done.returncode == 2
     assert "Traceback" not in done.stderr
     assert not mark.exists()
+
+
+def test_the_report_is_printed_whole(record_file: Path, tmp_path: Path, capsys: Capture) -> None:
+    """d 600 for 538.95: the report names the finding; its CSV holds the line."""
+    folder = tmp_path / "report"
+    file = claims(tmp_path, d="600 mm")
+    arguments = ("--claims", file, "--into", folder, "--checker", "N. N.", "--date", "2026-11-20")
+    assert audit(record_file, *arguments) == 1
+    names = ["H1-audit-findings.csv", "H1-audit-judged.csv", "H1-audit.html", "H1-audit.pdf"]
+    assert sorted(path.name for path in folder.iterdir()) == names
+    assert (folder / "H1-audit.pdf").read_bytes()[:5] == b"%PDF-"
+    assert "600 mm does not follow" in (folder / names[0]).read_text(encoding="utf-8-sig")
+    assert "H1-audit.pdf" in capsys.readouterr().err
+
+
+def test_a_wrong_date_writes_nothing(record_file: Path, tmp_path: Path, capsys: Capture) -> None:
+    file = claims(tmp_path, d="539 mm")
+    arguments = ("--claims", file, "--into", tmp_path / "report", "--date", "tomorrow")
+    assert audit(record_file, *arguments) == 2
+    assert "tomorrow" in capsys.readouterr().err
+    assert not (tmp_path / "report").exists()
+
+
+def test_a_drawing_against_the_calc(tmp_path: Path, capsys: Capture) -> None:
+    """The gallery beam is 620 deep; drawn 600 it is a finding, and the blank holds no value."""
+    path = tmp_path / "beam.json"
+    path.write_text(gallery.record_of().to_text(), encoding="utf-8")
+    blank = tmp_path / "drawing.csv"
+    assert audit(path, "--blank-drawing", blank) == 0
+    assert "then give it as --drawing" in capsys.readouterr().out
+    rows = list(csv.DictReader(blank.read_text(encoding="utf-8-sig").splitlines()))
+    assert {row["drawn"] for row in rows} == {""}
+    depth = next(row for row in rows if row["item"] == "overall depth")
+    blank.write_text(
+        f"item,place,drawn,unit,drawing,revision\n{depth['item']},{depth['place']},600,mm,S-1,A\n"
+    )
+    assert audit(path, "--drawing", blank) == 1
+    said = capsys.readouterr().out
+    assert "given/h: Overall depth: drawn 600 mm, 620" in said
+    blank.write_text("item,place,drawn,unit,drawing,revision\noverall dpth,,600,mm,S-1,A\n")
+    assert audit(path, "--drawing", blank) == 2
+    assert f"{blank}: " in capsys.readouterr().err

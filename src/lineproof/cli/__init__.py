@@ -109,8 +109,17 @@ def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
     table.add_argument(
         "--blank-full", type=Path, metavar="FILE", help="write a blank table of every line"
     )
+    table.add_argument(
+        "--blank-drawing", type=Path, metavar="FILE", help="write a blank table of what is drawn"
+    )
+    audit.add_argument(
+        "--drawing", type=Path, metavar="FILE", help="filled table of what is drawn, .csv or .xlsx"
+    )
     audit.add_argument("--calc", metavar="ID", help="which calc of a package of several")
     audit.add_argument("--json", action="store_true", help="print JSON instead of text")
+    audit.add_argument("--into", type=Path, metavar="DIR", help="print the report into a folder")
+    audit.add_argument("--checker", default="", metavar="NAME", help="who audits, for the report")
+    audit.add_argument("--date", default="", metavar="YYYY-MM-DD", help="date of the report")
 
 
 def _add_verify(commands: _Commands[argparse.ArgumentParser]) -> None:

@@ -6,6 +6,7 @@ import argparse
 import json
 import sys
 from collections.abc import Mapping, Sequence
+from dataclasses import replace
 from pathlib import Path
 from typing import Any
 
@@ -13,8 +14,12 @@ from lineproof.audit.audit import audit_alone, audit_claims
 from lineproof.audit.blank import blank_table
 from lineproof.audit.claims import read_claims
 from lineproof.audit.data import Audit, Finding
+from lineproof.audit.drawing import drawing_blank, drawing_findings
+from lineproof.audit.drawing_rows import HEADINGS
+from lineproof.audit.findings import importance
 from lineproof.audit.graph import Graph
 from lineproof.audit.junior import Cell, audit_cells
+from lineproof.audit.tables import read_table, write_table
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.cli.files import write_all
 from lineproof.cli.lines import altered_lines, read_records
@@ -30,12 +35,13 @@ _MOST_NAMED = 3
 def run(options: argparse.Namespace) -> int:
     """Audit a calculation or write a blank table; returns 1 where there is a finding."""
     record = picked(read_records(options.record), options.record, options.calc)
-    blank = options.blank or options.blank_full
-    if blank:
-        _write_blank(Graph(record), blank, full=options.blank_full is not None)
+    if options.blank or options.blank_full or options.blank_drawing:
+        _write_blank(record, options)
         return DONE
     graph = Graph(record)
     audit = _audit(graph, options)
+    if options.into is not None:
+        _print(audit, record, options)
     if options.json:
         sys.stdout.write(json.dumps(as_data(audit, graph), indent=1, allow_nan=False) + "\n")
     else:
@@ -59,20 +65,54 @@ def picked(records: Sequence[Record], path: Path, calc: str | None) -> Record:
     return found[0]
 
 
-def _write_blank(graph: Graph, path: Path, *, full: bool) -> None:
-    """Write a blank table; one that exists may hold claims and is never written over."""
+def _write_blank(record: Record, options: argparse.Namespace) -> None:
+    """Write a blank table; one that exists may be filled in and is never written over."""
+    path: Path = options.blank or options.blank_full or options.blank_drawing
     if path.exists():
-        raise UserError(f"{path}: exists already and may hold claims; choose another name")
-    content = blank_table(graph, path.suffix, full=full)
+        raise UserError(f"{path}: exists already and may be filled in; choose another name")
+    try:
+        if options.blank_drawing:
+            content = write_table(HEADINGS, drawing_blank(record), path.suffix)
+        else:
+            content = blank_table(Graph(record), path.suffix, full=options.blank_full is not None)
+    except UserError as error:
+        raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
     write_all({path: content})
-    sys.stdout.write(f"{path}: fill in the column 'claimed', then: lineproof audit --claims\n")
+    column, option = ("drawn", "drawing") if options.blank_drawing else ("claimed", "claims")
+    sys.stdout.write(f"{path}: fill in the column '{column}', then give it as --{option}\n")
 
 
 def _audit(graph: Graph, options: argparse.Namespace) -> Audit:
-    if options.claims is not None:
-        _refuse_altered(graph.record, options.record)
-        return audit_claims(graph.record, read_claims(graph, options.claims), graph)
-    return audit_alone(graph.record, _of_notebook(options.record, graph.record))
+    record = graph.record
+    if options.claims is None:
+        audit = audit_alone(record, _of_notebook(options.record, record))
+    else:
+        _refuse_altered(record, options.record)
+        audit = audit_claims(record, read_claims(graph, options.claims), graph)
+    if options.drawing is None:
+        return audit
+    found = [*audit.findings, *_of_drawing(options.drawing, record)]
+    return replace(audit, findings=tuple(sorted(found, key=importance)))
+
+
+def _of_drawing(path: Path, record: Record) -> tuple[Finding, ...]:
+    rows = read_table(path).rows
+    try:
+        return drawing_findings(record, rows)
+    except UserError as error:
+        raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
+
+
+def _print(audit: Audit, record: Record, options: argparse.Namespace) -> None:
+    """Print the report into a folder: all its files or none."""
+    from lineproof.audit.report import report_files  # noqa: PLC0415 - 0.5 s with all that it prints
+    from lineproof.package.files import file_name  # noqa: PLC0415 - with it
+
+    name = f"{file_name(audit.calc)}-audit"
+    files = report_files(audit, record, name, checker=options.checker, date=options.date)
+    write_all({options.into / file: content for file, content in files.items()})
+    told = ", ".join(sorted(files))
+    sys.stderr.write(f"{options.into}: {told}\n")
 
 
 def _refuse_altered(record: Record, path: Path) -> None:
