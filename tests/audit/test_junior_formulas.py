@@ -159,7 +159,8 @@ def test_branches_of_a_limit() -> None:
 
 
 @pytest.mark.parametrize(
-    "text", ["2*(a + b)", "a - (b - c)", "a/(b*c)", "(a + b)**2", "-(a + b)", "sqrt(a)/b", "a**(b/2)"]
+    "text",
+    ["2*(a + b)", "a - (b - c)", "a/(b*c)", "(a + b)**2", "-(a + b)", "sqrt(a)/b", "a**(b/2)"],
 )
 def test_a_tree_prints_as_it_is_typed(text: str) -> None:
     assert text_of(parse_line(f"x = {text}")[1]) == text

@@ -11,7 +11,7 @@ from functools import cache
 from itertools import islice
 
 from lineproof.audit.junior_edits import ONE, branches, replaced
-from lineproof.audit.junior_naming import PLAINEST, Named, named_difference
+from lineproof.audit.junior_naming import PLAINEST, UNEXPLAINED, Named, named_difference
 from lineproof.audit.junior_sample import (
     Values,
     constant_ratio,
@@ -35,6 +35,7 @@ _LARGEST = 150
 _DEGREES_IN_RADIAN = 57.29577951308232
 _MOST_NAMED = 4
 _CLOSE = 0.5
+_CLOSE_UNEXPLAINED = 0.6
 _PROVABLE = 90
 _INDEX = re.compile(r"_?[0-9]{1,2}\Z")
 
@@ -99,27 +100,34 @@ def compared(
     is taken for a conversion of units, as plain numbers in code need it.
     """
     known = catalogue_of(symbol)
-    if not known or sum(1 for _ in islice(walk(tree), _LARGEST + 1)) > _LARGEST:
+    if not known:
         return Compared(Said.UNLIKE)
+    if sum(1 for _ in islice(walk(tree), _LARGEST + 1)) > _LARGEST:
+        return Compared(Said.UNLIKE, known[0])
     met = [_agreement(tree, formula, units or {}, scales=scales) for formula in known]
     agreed = [one for one in met if one is not None]
     if agreed:
         return min(agreed, key=lambda one: one.said is not Said.AGREES)
     if scales:
         tree = _without_conversions(tree, known)
+    return _in_words(tree, known, units or {})
+
+
+def _in_words(tree: Tree, known: Iterable[Formula], units: Mapping[str, str]) -> Compared:
+    """Return what differs from the formula that comes nearest, in the plainest words."""
     pairs = sorted(
         (pair for formula in known for pair in _nearest_forms(tree, formula)),
         key=lambda pair: -likeness(*pair[:2]),
     )
     best: tuple[Formula, Named] | None = None
     for mine, theirs, formula in pairs[:_MOST_NAMED]:
-        if likeness(mine, theirs) < LIKE:
+        alike = likeness(mine, theirs)
+        if alike < LIKE or (best is not None and best[1].cost <= PLAINEST):
             break
-        told = named_difference(mine, theirs, units or {})
-        if best is None or told.cost < best[1].cost:
+        told = named_difference(mine, theirs, units)
+        explained = told.cost < UNEXPLAINED or alike >= _CLOSE_UNEXPLAINED
+        if explained and (best is None or told.cost < best[1].cost):
             best = formula, told
-        if best[1].cost <= PLAINEST:
-            break
     if best is None:
         return Compared(Said.UNLIKE, pairs[0][2])
     formula, told = best

@@ -27,18 +27,31 @@ from lineproof.standards.catalogue import NOTATION
 MOST = 120
 """Assignments of a notebook that are compared with the catalogue."""
 _TURN = 2 * math.pi
+_OWN = Severity.OBSERVATION
 _SAME = 5e-4
 _WORD = re.compile(r"[A-Za-z0-9/.·²³⁴^*]+")
 _HIDDEN_STRESS = frozenset(["kPa", "Pa", "GPa", "psi", "ksi", "psf", "ksf"])
 
 
-def in_order(codes: Sequence[Code]) -> Iterator[tuple[Assigned, dict[str, float]]]:
-    """Give every assignment with the values that the names before it have, as text shows them."""
+def in_order(codes: Sequence[Code]) -> Iterator[tuple[Assigned, Mapping[str, float]]]:
+    """Give every assignment with the values of the names before it, as far as text shows them.
+
+    The mapping changes as the walk goes on.
+    """
     values: dict[str, float] = {}
     for code in codes:
         for made in assigned(code):
-            yield made, dict(values)
+            yield made, values
             _keep(made, values)
+
+
+def cell_by_cell(codes: Sequence[Code]) -> Iterator[tuple[Code, Mapping[str, float]]]:
+    """Give every cell with the values known after it; the mapping changes as the walk goes on."""
+    values: dict[str, float] = {}
+    for code in codes:
+        for made in assigned(code):
+            _keep(made, values)
+        yield code, values
 
 
 def _keep(made: Assigned, values: dict[str, float]) -> None:
@@ -47,17 +60,6 @@ def _keep(made: Assigned, values: dict[str, float]) -> None:
     values.pop(made.symbol, None)
     if value is not None and made.plain:
         values[made.symbol] = value
-
-
-def values_after(codes: Sequence[Code]) -> dict[int, dict[str, float]]:
-    """Return the values known after each cell, by the cell's number."""
-    found: dict[int, dict[str, float]] = {}
-    values: dict[str, float] = {}
-    for code in codes:
-        for made in assigned(code):
-            _keep(made, values)
-        found[code.cell.number] = dict(values)
-    return found
 
 
 def _value(made: Assigned, values: Mapping[str, float]) -> float | None:
@@ -80,13 +82,14 @@ def code_findings(codes: Sequence[Code], scope: Scope | None) -> Iterator[Findin
         if not _is_number(made.tree):
             known = bool(catalogue_of(made.symbol)) and not isinstance(made.tree, Name)
             if known and (compared := compared + 1) <= MOST:
-                yield from judged(_hand(made), find, units)
+                held = judged(_hand(made), find, units)
+                # A letter may be anything in code: only what is like the formula is meant by it.
+                yield from (f for f in held if len(made.name) > 1 or f.severity is not _OWN)
             yield from _power_of_ten(made, values, find)
         else:
             yield from _typed(made, scope)
-    after = values_after(codes)
-    for code in codes:
-        yield from _radians(code, after)
+    for code, values in cell_by_cell(codes):
+        yield from _radians(code, values)
     if compared > MOST:
         yield finding(
             Severity.OBSERVATION, f"more than {MOST} formulas in code; the rest is not compared"
@@ -152,11 +155,12 @@ def _typed(made: Assigned, scope: Scope | None) -> Iterator[Finding]:
     """Compare a number typed in code with what the record holds for its symbol."""
     nodes = scope.by_symbol.get(made.symbol, ()) if scope is not None else ()
     value = _value(made, {})
+    letter = len(made.name) == 1  # which may be anything in code
     where = f"{made.cell.name}: {made.name} = {made.text}"
     if value is None:
         return
     if not nodes:
-        if made.symbol in RESULTS and made.symbol in NOTATION:
+        if made.symbol in RESULTS and not letter:
             yield finding(
                 Severity.MINOR,
                 f"{where} is typed though a calculation works it out; nothing shows where it "
@@ -179,7 +183,8 @@ def _typed(made: Assigned, scope: Scope | None) -> Iterator[Finding]:
                 advice="correct the unit, and look where the value is used",
             )
             return
-    yield from _against(where, made, met, nodes)
+    if met or not letter:
+        yield from _against(where, made, met, nodes)
 
 
 def _against(
@@ -244,10 +249,9 @@ def _unit_said(made: Assigned) -> str:
 # -- angles ----------------------------------------------------------------------------------
 
 
-def _radians(code: Code, after: Mapping[int, Mapping[str, float]]) -> Iterator[Finding]:
+def _radians(code: Code, values: Mapping[str, float]) -> Iterator[Finding]:
     if code.tree is None:
         return
-    values = after.get(code.cell.number, {})
     for node in ast.walk(code.tree):
         if not isinstance(node, ast.Call) or called(node) not in TRIGONOMETRIC or not node.args:
             continue

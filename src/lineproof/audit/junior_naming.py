@@ -24,7 +24,8 @@ MOST_TRIALS = 300
 PLAINEST = 12
 """Cost of a difference in one thing: nothing plainer is looked for."""
 _MOST_CHOICES = 60
-_UNEXPLAINED = 100
+UNEXPLAINED = 100
+"""Cost of a difference of which only the symbols can be said."""
 _MOST_EXCHANGED = 3
 _MISSING, _PLACED, _FACTOR, _LIMIT, _UNUSUAL = 10, 10, 12, 5, 3
 
@@ -70,7 +71,7 @@ def named_difference(hand: Tree, theirs: Tree, units: Mapping[str, str]) -> Name
             break
     if best is not None:
         return replace(best, missing=missing)
-    return Named(_by_names(hand, theirs), _UNEXPLAINED, missing)
+    return Named(_by_names(hand, theirs), UNEXPLAINED, missing)
 
 
 def _like(forms: Iterable[Tree], hand: Tree) -> list[Tree]:

@@ -11,7 +11,7 @@ from typing import Any
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.junior_arithmetic import symbol_of
 from lineproof.audit.junior_cells import CODE, PARAMETERS, Cell
-from lineproof.audit.junior_code import values_after
+from lineproof.audit.junior_code import cell_by_cell
 from lineproof.audit.junior_python import Code, Recorded, assigned, recorded
 from lineproof.audit.junior_scope import Scope, finding, listed, name_of
 from lineproof.errors import UserError
@@ -83,21 +83,26 @@ def _order(code: Sequence[Cell]) -> Iterator[Finding]:
 
 def _set_later(codes: Sequence[Code]) -> Iterator[Finding]:
     """Tell a cell that uses a name which a cell above it has set again since."""
-    for place, code in enumerate(codes):
+    latest: dict[str, tuple[int, Cell]] = {}
+    for code in codes:
         count = code.cell.count
         if code.tree is None or count is None:
             continue
-        used = _names(code, ast.Load) - _names(code, ast.Store)
-        for above in codes[:place]:
-            later = above.cell.count
-            names = sorted(used & _names(above, ast.Store))
-            if later is not None and later > count and names:
-                yield finding(
-                    Severity.MAJOR,
-                    f"{code.cell.name} was run (as {count}) before {above.cell.name} (as {later}), "
-                    f"which sets {listed(names)}: its results are older than its inputs",
-                    advice=RUN_ALL,
-                )
+        sets = _names(code, ast.Store)
+        used = sorted((_names(code, ast.Load) - sets) & latest.keys())
+        later = [(name, *latest[name]) for name in used if latest[name][0] > count]
+        if later:
+            _, when, above = later[0]
+            names = [name for name, _, cell in later if cell is above]
+            yield finding(
+                Severity.MAJOR,
+                f"{code.cell.name} was run (as {count}) before {above.name} (as {when}), which "
+                f"sets {listed(names)}: its results are older than its inputs",
+                advice=RUN_ALL,
+            )
+        for name in sets:
+            if name not in latest or latest[name][0] < count:
+                latest[name] = count, code.cell
 
 
 def _names(code: Code, how: type[ast.expr_context]) -> set[str]:
@@ -136,9 +141,7 @@ def _shows(code: Code) -> bool:
 
 def _printed(codes: Sequence[Code]) -> Iterator[Finding]:
     """Compare numbers that a cell printed with what its code gives as it stands."""
-    after = values_after(codes)
-    for code in codes:
-        values = after[code.cell.number]
+    for code, values in cell_by_cell(codes):
         text = "\n".join(output[:_LONGEST_OUTPUT] for output in code.cell.outputs)
         for name, number in _SHOWN.findall(text)[:_MOST_SHOWN]:
             value = values.get(symbol_of(name))
