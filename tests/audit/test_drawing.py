@@ -146,6 +146,8 @@ def test_severity_by_direction_and_effect(
 
     assert finding.severity == severity
     assert finding.what.endswith("in the calc.")
+    assert finding.clause
+    assert finding.advice
 
 
 def test_open_stirrups_for_closed_ones_are_major() -> None:

@@ -5,6 +5,8 @@ from __future__ import annotations
 from functools import cache
 
 import pytest
+from tests.beams import gallery
+from tests.beams.continuous.flow import MIXED, record_of
 
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.slip_kinds import FAMILIES
@@ -14,7 +16,7 @@ from lineproof.audit.traps_view import Trap
 from .altered import NAMES, changed, demo
 from .trap_cases import SECTION, SHEAR, STIRRUPS, Case
 from .trap_cases_service import LAID, LOADS, SERVICE, WHOLE
-from .trap_sheets import SHEETS
+from .trap_sheets import SHEETS, right
 
 CASES = (*SECTION, *SHEAR, *STIRRUPS, *LOADS, *WHOLE, *SERVICE, *LAID, *SHEETS)
 
@@ -28,6 +30,18 @@ def met(case: Case) -> list[tuple[Trap, Finding]]:
 @pytest.mark.parametrize("name", NAMES)
 def test_no_false_alarm_in_the_demo_calcs(name: str) -> None:
     assert trap_findings(demo(name)) == ()
+
+
+def test_no_false_alarm_in_a_calc_of_its_own_making() -> None:
+    assert trap_findings(right()) == ()
+
+
+def test_no_false_alarm_in_the_simple_beam() -> None:
+    assert trap_findings(gallery.record_of()) == ()
+
+
+def test_no_false_alarm_with_a_cantilever_a_fixed_end_and_single_loads() -> None:
+    assert trap_findings(record_of(**MIXED)) == ()
 
 
 @pytest.mark.parametrize("case", CASES, ids=lambda case: f"{case.number} {case.said[:50]}")

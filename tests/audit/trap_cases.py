@@ -144,6 +144,8 @@ SHEAR = (
          formula="V_c = phi_c*lambda_*beta*min(1.0*sqrt(f_c), 8)*b_w*d", args={"d": "sag-2/d"}),
     line(4, "the effective depth d stands where d_v belongs", "shear-2-left/V_s",
          args={"d_v": "sag-2/d"}),
+    line(4, "the effective depth d stands where d_v belongs", "shear-2-left/x_f",
+         formula="x_f = b_sn/2 + d", args={"d": "sag-2/d"}),
     line(4, "is not the larger of 0.9 d and 0.72 h", "shear-2-left/d_v",
          formula="d_v = 0.72*h", value=446.4),
     line(5, "crushing of the web goes with f'c, not with its root", "shear-2-left/V_rmax",

@@ -167,5 +167,6 @@ LAID = (
          formula="l_s = max(1.0*l_d0, 300)", value=496.4),
     line(23, "is shorter than 300 mm", "anchorage-bar-1/l_s", value=280.0),
     line(31, "the bars are told as 5-20M, which have 1500 mm²", "sag-1/A_s", value=1200.0),
+    line(31, "the bars are told as 2-20M, 1-20M in each overhang", "hog-1-right/A_s", value=900.0),
     line(31, "the stirrups of this zone stand at 350 mm", "shear-2-left/s", value=200.0),
 )  # fmt: skip

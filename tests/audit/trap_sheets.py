@@ -128,6 +128,53 @@ def area_too_small() -> Record:
     return sheet.close()
 
 
+def reduced(use: str) -> Record:
+    """Return a calc that reduces the live load of 100 m2 of a use, by the rule of offices."""
+    sheet = _sheet(
+        A_L=("100 m2", "area"), A_0=("9.8 m2", "reference area"), l=("8 m", "span"),
+        b_tr=("12.5 m", "tributary width"),
+    )  # fmt: skip
+    with sheet.part("loads", "Loads"):
+        sheet.note("choices", f"Section T; use: {use}; exposure class N.", title="Choices")
+        sheet.line("r_L = 0.3 + sqrt(A_0/A_L)", unit="", title="Reduction")
+    return sheet.close()
+
+
+def larger_area() -> Record:
+    """Return a calc that reduces by 100 m2 where the beam carries 8 x 5 = 40 m2."""
+    sheet = _sheet(
+        A_L=("100 m2", "area"), A_0=("9.8 m2", "reference area"), l=("8 m", "span"),
+        b_tr=("5 m", "tributary width"),
+    )  # fmt: skip
+    with sheet.part("loads", "Loads"):
+        sheet.line("r_L = 0.3 + sqrt(A_0/A_L)", unit="", title="Reduction")
+    return sheet.close()
+
+
+def bars_of_the_support() -> Record:
+    """Return a calc whose ratio of compression bars at midspan takes those over the support."""
+    sheet = _sheet(d=("540 mm", "depth"))
+    with sheet.part("top", "Top bars over the support"):
+        sheet.given("A_sp", "900 mm2", "bars in compression")
+    with sheet.part("deflection", "Deflection at midspan"):
+        sheet.line(
+            "rho_p = A_sp/(b_f*d)", unit="", title="Ratio", A_sp=sheet.entry("top/A_sp")
+        )  # fmt: skip
+    return sheet.close()
+
+
+def bars_of_both_faces() -> Record:
+    """Return a calc whose strain counts the bars of both faces."""
+    sheet = _sheet(
+        V_f=("200 kN", "factored shear"), d_v=("500 mm", "depth for shear"),
+        A_sb=("1500 mm2", "bottom bars"), A_sp=("900 mm2", "top bars"),
+    )  # fmt: skip
+    with sheet.part("shear", "Shear"):
+        sheet.line("A_s = A_sb + A_sp", unit="mm2", title="Bars")
+        sheet.line("eps_x = (M_f/d_v + V_f)/(2*E_s*A_s)", unit="", title="Strain at mid-depth")
+    return sheet.close()
+
+
 def redistributed(formula: str, **more: tuple[str, str]) -> Record:
     """Return a calc that redistributes a moment which is no moment of one load case."""
     sheet = _sheet(p_rd=("10", "change, per cent"), **more)
@@ -162,6 +209,11 @@ def typed_area() -> Record:
     return sheet.close()
 
 
+def right() -> Record:
+    """Return a calc that reduces and counts as it should: 100 m2 of offices."""
+    return reduced("office")
+
+
 SHEETS = (
     Case(12, "a nominal resistance is compared with a factored force", nominal, "flexure/strength"),
     Case(13, "the balanced block reaches below the flange", balanced_as_a_rectangle,
@@ -174,6 +226,13 @@ SHEETS = (
     Case(15, "The load combination 1.4D is not made", no_dead_alone, "loads/w_f2"),
     Case(27, "the clear span stands for the span between supports", clear_span, "moment/M_f"),
     Case(16, "the area is too small for a reduction", area_too_small, "loads/r_L"),
+    Case(16, "live load on roofs and slabs is not reduced", lambda: reduced("roof"), "loads/r_L"),
+    Case(16, "the reduction of other uses is taken for this use",
+         lambda: reduced("assembly area"), "loads/r_L"),
+    Case(16, "the area is larger than span times tributary width", larger_area, "loads/r_L"),
+    Case(19, "the bars in compression are those of another place", bars_of_the_support,
+         "deflection/rho_p"),
+    Case(9, "bars on the face in compression are counted", bars_of_both_faces, "shear/eps_x"),
     Case(17, "an envelope is redistributed, not a load case", envelope, "moments/M_f"),
     Case(17, "a moment by coefficients is redistributed", coefficients, "moments/M_f"),
     Case(31, "is not the area of 5 bars of 300 mm²", typed_area, "bars/A_s"),

@@ -11,12 +11,14 @@ from lineproof.audit.drawing_rows import (
     BARS_ITEM,
     CUT_ITEM,
     FORM_ITEM,
+    FROM_ITEM,
     HANGER_ITEM,
     HEADINGS,
     LAP_ITEM,
     LENGTH_ITEM,
     SPACING_ITEM,
     STIRRUPS_ITEM,
+    TO_ITEM,
     WHOLE,
     Item,
     area_of,
@@ -49,8 +51,26 @@ MATTERS = {
     HANGER_ITEM: Severity.MAJOR,
 }
 """How much less than the calc's matters, by item; of any other item it is minor."""
-WITHIN = {LENGTH_ITEM: 10.0, "zone from": 25.0, "zone to": 25.0}
+WITHIN = {LENGTH_ITEM: 10.0, FROM_ITEM: 25.0, TO_ITEM: 25.0}
 """Lengths [mm] that a drawing may differ by, by item; else half a millimetre."""
+CLAUSES = {
+    "cover": "A23.1 Table 17",
+    "strength of concrete": "8.6.1",
+    "strength of bars": "8.5.1",
+    BARS_ITEM: "8.1.3",
+    LENGTH_ITEM: "12.1",
+    STIRRUPS_ITEM: "11.3.5",
+    FORM_ITEM: "11.2.7",
+    SPACING_ITEM: "11.3.8",
+    FROM_ITEM: "11.3.8",
+    TO_ITEM: "11.3.8",
+    CUT_ITEM: "12.10.3",
+    LAP_ITEM: "12.15",
+    HANGER_ITEM: "11.2.12",
+}
+"""The clause that an item belongs to; sizes belong to the section as a whole."""
+_SECTION = "geometry"
+_REVISIONS = "drawings"
 _SAME = 0.5
 _BARS = re.compile(r"(\d{1,3})\s*[- x×]?\s*(\d\dM)", re.IGNORECASE)
 _LEGS = re.compile(r"(\d{1,2})\s*(?:legs?|[- x×])?\s*(?:of\s+)?(\d\dM)", re.IGNORECASE)
@@ -229,7 +249,7 @@ def _compared(graph: Graph, item: Item, drawn: Drawn) -> Iterator[Finding]:
         f"{item.name.capitalize()}{place}: drawn {drawn.text}, {item.text} in the calc"
         f"{_where(drawn)}.",
         item.ids,
-        "",
+        CLAUSES.get(item.name, _SECTION),
         _advice(item, harmless=severity == Severity.OBSERVATION),
         effects,
     )
@@ -265,6 +285,7 @@ def _extra(drawn: Drawn) -> Finding:
         Severity.MINOR,
         f"{drawn.item.capitalize()}, {drawn.place}: drawn {drawn.text}, not in the calc"
         f"{_where(drawn)}.",
+        clause=CLAUSES.get(drawn.item, _SECTION),
         advice="Ask what they are for: bars that the calc does not count may hinder the concrete.",
     )
 
@@ -283,6 +304,7 @@ def _not_drawn(items: Iterable[Item]) -> Iterator[Finding]:
             Severity.MAJOR if steel else Severity.MINOR,
             f"{name.capitalize()}{where}: not on the drawing.",
             tuple(dict.fromkeys(entry_id for item in left for entry_id in item.ids)),
+            CLAUSES.get(name, _SECTION),
             advice="See whether the drawing shows it, and fill in the row.",
         )
 
@@ -307,7 +329,7 @@ def _revisions(record: Record, rows: Iterable[Drawn]) -> Iterator[Finding]:
             )
         if drawing not in told:
             yield Finding(
-                SOURCE, Severity.MINOR, f"The calc names no drawing {drawing}.",
+                SOURCE, Severity.MINOR, f"The calc names no drawing {drawing}.", clause=_REVISIONS,
                 advice="List it among the drawings of the project.",
             )  # fmt: skip
             continue
@@ -320,7 +342,7 @@ def _revisions(record: Record, rows: Iterable[Drawn]) -> Iterator[Finding]:
 
 
 def _revision(what: str, advice: str) -> Finding:
-    return Finding(SOURCE, Severity.MAJOR, f"{what}.", advice=advice)
+    return Finding(SOURCE, Severity.MAJOR, f"{what}.", clause=_REVISIONS, advice=advice)
 
 
 __all__ = ["HEADINGS", "drawing_blank", "drawing_findings"]

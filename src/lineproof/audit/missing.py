@@ -219,5 +219,6 @@ def _left_out(record: Record) -> Iterator[Finding]:
                 SOURCE,
                 MAJOR,
                 f"The part on {_SERIES_NAMES[name]} {number} is left out; later ones are there.",
+                clause="12.15" if name == "lap" else "12.2",
                 advice="Ask for the part, or for the reason why it is not needed.",
             )

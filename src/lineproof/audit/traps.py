@@ -46,6 +46,7 @@ COVERED_BY: Mapping[tuple[int, str], str] = {
     (30, "factored for specified in a claim"): f"{SLIP}factored for service",
     (31, "one leg of the stirrups in a claim"): f"{SLIP}stirrup legs",
     (31, "number of bars and their area in a claim"): f"{SLIP}bar count changed but not the area",
+    (31, "length of a cantilever in a claim"): f"{SLIP}clear for centre span",
     (31, "calc and drawing at different revisions"): "drawing",
     (28, "checks that another standard asks for, and this one too"): "missing",
 }

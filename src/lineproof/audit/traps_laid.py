@@ -10,6 +10,7 @@ from lineproof.audit.traps_view import Caught, Trap, View, close
 from lineproof.standards.a23_3.bars import BARS
 
 _BARS = re.compile(r"(\d+)-(\d\dM)")
+_TOLD = re.compile(r"(?:Bottom|Top) bars: ([^,.]*)(, [^,.]* in (?:each|the) overhang)?[,.]")
 _ZONE = re.compile(r"([\d.]+) to ([\d.]+)")
 _SPACING = re.compile(r" at ([\d.]+) mm")
 _BESIDE = 60.0
@@ -21,24 +22,29 @@ def _told_bars(view: View) -> Iterator[Caught]:
     """Look for a number of bars in words that the area does not follow."""
     for part in view.record.parts:
         area = view.part(part["key"]).get("A_s")
-        for entry in part["entries"]:
-            text = str(entry.get("text", ""))
-            told = entry["symbol"] == "bars-text" and re.match(r"Bottom bars: ([^,]*)", text)
-            if not told or area is None:
+        notes = (str(e["text"]) for e in part["entries"] if e["symbol"] == "bars-text")
+        for told in filter(None, map(_TOLD.match, notes)):
+            laid = _laid(told.group(1), told.group(2))
+            if area is None or not laid or close(view.graph.stored[area.id], laid, 0.001):
                 continue
-            laid = sum(
-                int(number) * BARS.number(size, "A_b")
-                for number, size in _BARS.findall(told.group(1))
-                if size in BARS.rows
+            yield Caught(
+                area,
+                f"the bars are told as {told.group(1)}{told.group(2) or ''}, which have {laid:g} "
+                "mm²",
+                "Change number and area together.",
+                clause="G30.18",
+                right={area.id: laid},
             )
-            if laid and not close(view.graph.stored[area.id], laid, 0.001):
-                yield Caught(
-                    area,
-                    f"the bars are told as {told.group(1)}, which have {laid:g} mm²",
-                    "Change number and area together.",
-                    clause="G30.18",
-                    right={area.id: laid},
-                )
+
+
+def _laid(web: str, overhangs: str | None) -> float:
+    """Return the area of bars told in words, those in each overhang twice; 0 if not understood."""
+    twice = overhangs is not None and "each" in overhangs
+    found = [(1, bars) for bars in _BARS.findall(web)]
+    found += [(1 + twice, bars) for bars in _BARS.findall(overhangs or "")]
+    if any(size not in BARS.rows for _, (_, size) in found):
+        return 0.0
+    return sum(times * int(n) * BARS.number(size, "A_b") for times, (n, size) in found)
 
 
 def _zones(view: View) -> dict[str, list[tuple[float, float, float]]]:

@@ -92,6 +92,7 @@ def _long_term(view: View) -> Iterator[Caught]:
     for node in view.lines("delta_t"):
         yield from _total(view, node)
     for node in view.lines("rho_p"):
+        yield from _other_place(view, node)
         b = view.target(node, "b")
         web = "b_w" in names(node) or (b is not None and b.symbol == "b_w")
         if web and next(view.values("b_f"), None) and not view.over_support(node):
@@ -102,6 +103,18 @@ def _long_term(view: View) -> Iterator[Caught]:
                 Severity.MINOR,
                 clause,
             )
+
+
+def _other_place(view: View, node: Node) -> Iterator[Caught]:
+    target = view.target(node, "A_sp")
+    if target is not None and view.over_support(target) != view.over_support(node):
+        yield Caught(
+            node,
+            "the bars in compression are those of another place",
+            "ρ' is that at midspan, of a cantilever that at the support.",
+            Severity.MINOR,
+            "9.8.2.5",
+        )
 
 
 def _total(view: View, node: Node) -> Iterator[Caught]:

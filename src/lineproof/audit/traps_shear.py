@@ -34,7 +34,7 @@ _CAP = 64.0
 
 def _depth(view: View) -> Iterator[Caught]:
     advice = "Shear goes with d_v, the larger of 0.9 d and 0.72 h."
-    for node in view.lines("V_c", "V_rmax", "V_s", "s_max"):
+    for node in view.lines("V_c", "V_rmax", "V_s", "s_max", "x_f"):
         target = view.target(node, "d_v")
         bare = "d" in names(node) and "d_v" not in names(node)
         if bare or (target is not None and target.symbol == "d"):
@@ -194,7 +194,7 @@ def _strain_bars(view: View) -> Iterator[Caught]:
         bars = view.target(node, "A_s")
         if bars is None:
             continue
-        if bars.symbol == "A_sp" or "A_sp" in names(bars) | set(bars.args.values()):
+        if bars.symbol == "A_sp" or "A_sp" in names(bars):
             yield Caught(
                 node,
                 "bars on the face in compression are counted",
