@@ -95,10 +95,11 @@ def _outlines(font: Any) -> dict[int, str]:
     odd = "" if mapped == "/Identity" else "mapped"
     for key, draw in (("/FontFile3", _compact), ("/FontFile2", _true_type)):
         if key in descriptor:
-            return {
-                code: f"{odd}{digest}"
-                for code, digest in draw(descriptor[key].get_object().get_data()).items()
-            }
+            try:
+                drawn = draw(descriptor[key].get_object().get_data())
+            except Exception:  # noqa: BLE001 - a font that cannot be read is none of ours
+                return {}
+            return {code: f"{odd}{digest}" for code, digest in drawn.items()}
     return {}
 
 

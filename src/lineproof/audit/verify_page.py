@@ -89,7 +89,9 @@ _STEP = re.compile(
     rb"|(?P<close>EMC)\s*" % (*(_NUMBER,) * 4, _STRING, _PROPERTIES),
     re.DOTALL,
 )
-_SHOWN = re.compile(rb"/(\w+) (%b) Tf|(%b)" % (_NUMBER, _STRING), re.DOTALL)
+_SHOWN = re.compile(
+    rb"/(\w+) (%b) Tf|(?<!ActualText)(%b|<[0-9A-Fa-f]+>)" % (_NUMBER, _STRING), re.DOTALL
+)
 _COLOUR = re.compile(rb"/(\w+) (cs|CS)\b")
 _MARKED = re.compile(rb"%b|BDC|BMC|EMC" % _STRING, re.DOTALL)
 _POINT = re.compile(rb"(%b) (%b) [mlc]\b" % (_NUMBER, _NUMBER))
@@ -107,11 +109,14 @@ SHORT_RULE = 60.0
 
 
 def string_bytes(literal: bytes) -> bytes:
-    r"""Return the bytes of a literal string with its parentheses.
+    r"""Return the bytes of a string as a page writes it, in parentheses or as digits.
 
     >>> string_bytes(rb"(a\\(\\051\\n)")
     b'a()\n'
     """
+    if literal.startswith(b"<"):
+        digits = literal[1:-1].decode("ascii")
+        return bytes.fromhex(digits + "0" * (len(digits) % 2))
     if b"\\" not in literal:
         return literal[1:-1]
     return _ESCAPE.sub(_unescaped, literal[1:-1])

@@ -30,8 +30,10 @@ from lineproof.record import Record
 _SUFFIX = ".lineproof.json"
 _FOOTER = re.compile(r"Record ([0-9a-f]{16}[0-9a-f ]*…?)\Z")
 _MARKED = b"/Subtype/Footer/Type/Pagination"
-_END = re.compile(rb"%%EOF(?:\r\n|\r|\n|\Z)")
-_HEAD = 1024
+_END = re.compile(rb"%%EOF[\r\n]{0,2}")
+_TABLE_AT = re.compile(rb"startxref\s+(\d{1,12})\s")
+_TABLE = re.compile(rb"\s*(?:xref|\d+ \d+ obj)")
+_HEAD, _TAIL = 1024, 4096
 _LETTER, _A4 = (612.0, 792.0), (595.28, 841.89)
 _LINK = "/Link"
 
@@ -78,6 +80,14 @@ def _silent() -> Iterator[None]:
         logger.setLevel(level)
 
 
+def _table_found(content: bytes) -> bool:
+    """Tell whether the table of objects stands where the file says."""
+    said = _TABLE_AT.findall(content[-_TAIL:])
+    header = content.find(b"%PDF-")
+    places = (int(said[-1]), int(said[-1]) + header) if said else ()
+    return any(_TABLE.match(content, place) for place in places)
+
+
 class _File:
     """A PDF opened: its pages, what is attached to it, what others have done to it."""
 
@@ -89,6 +99,10 @@ class _File:
             raise UserError("not a PDF, whatever its name says; give a package as it was issued")
         if not _END.search(content):
             raise UserError("this PDF is damaged, its end is missing; give the whole file")
+        if not _table_found(content):
+            raise UserError(
+                "this PDF is damaged, bytes are missing inside; give the file as issued"
+            )
         try:
             self.reader = pypdf.PdfReader(io.BytesIO(content))
             locked = self.reader.is_encrypted
@@ -172,6 +186,32 @@ class _Own:
     pages: list[int] = field(default_factory=list)
     marks: list[Mark] = field(default_factory=list)
     sources: list[Source] = field(default_factory=list)
+
+    def add(self, page: int, marks: Sequence[Mark]) -> None:
+        """Add a page; its marks count pages within the package."""
+        self.marks += [mark._replace(page=len(self.pages)) for mark in marks]
+        self.pages.append(page)
+
+    def take(self, other: _Own) -> None:
+        """Take over the pages of another one, all in the order of the file."""
+        of_page: dict[int, list[Mark]] = {page: [] for page in sorted(self.pages + other.pages)}
+        for own in (self, other):
+            for mark in own.marks:
+                of_page[own.pages[mark.page]].append(mark)
+        self.pages, self.marks = [], []
+        for page, marks in of_page.items():
+            self.add(page, marks)
+
+    def counted(self) -> tuple[set[int], set[str]]:
+        """Return the numbers that the pages bear, and of how many pages they say to be."""
+        heads = [m for m in self.marks if m.zone is Zone.RUNNING and m.number]
+        return {m.number for m in heads}, {m.text.rpartition(" ")[2] for m in heads}
+
+
+def _fits(page: _Own, home: _Own) -> bool:
+    """Tell whether pages with an altered footer are those that a package lacks."""
+    (own, own_total), (known, total) = page.counted(), home.counted()
+    return bool(own) and not own & known and own_total == total
 
 
 class _Checking:
@@ -262,8 +302,7 @@ class _Checking:
             if not footer:
                 continue
             own = groups.setdefault(footer, _Own(footer))
-            own.marks += [mark._replace(page=len(own.pages)) for mark in marks]
-            own.pages.append(number)
+            own.add(number, marks)
         return list(groups.values())
 
     def _read(
@@ -282,8 +321,8 @@ class _Checking:
                 text = page.extract_text()
                 footer = next((digest for digest in digests if digest in text), "")
                 return footer, [Mark(-1, Kind.FOREIGN, Zone.BODY, number, 0.0, 0.0)]
-        except (ValueError, KeyError, TypeError, AttributeError, IndexError):
-            return "", []  # a page that we have not printed may be as odd as it likes
+        except Exception:  # noqa: BLE001 - a page of others may be as odd as it likes
+            return "", []
         return "", []
 
     def _match(self, owns: list[_Own], sources: Sequence[Source]) -> None:
@@ -307,18 +346,11 @@ class _Checking:
         """Tell of pages whose footer names a record that is not there."""
         what = f"the footer names record {own.footer}, which is not attached"
         self.alterations.append(Alteration(Where.PRINT, what, page=own.pages[0] + 1))
-        around = [o for o in owns if o.sources and o.pages[0] < own.pages[-1]]
-        if waiting:
+        home = next((o for o in owns if o.sources and _fits(own, o)), None)
+        if home is None and waiting:
             own.sources = [waiting.pop(0)]
-        elif around:  # a page of the package before it, with its footer altered
-            home = around[-1]
-            both = sorted([*home.pages, *own.pages])
-            marks = [(home.pages[m.page], m) for m in home.marks]
-            marks += [(own.pages[m.page], m) for m in own.marks]
-            home.marks = [
-                m._replace(page=both.index(page)) for page, m in sorted(marks, key=lambda p: p[0])
-            ]
-            home.pages = both
+        elif home is not None:
+            home.take(own)
             owns.remove(own)
 
     def _compare(self, own: _Own) -> None:

@@ -1,0 +1,429 @@
+"""PDF packages verified: intact ones, handled ones, forged ones, and files that are none."""
+
+from __future__ import annotations
+
+import io
+import re
+from collections.abc import Callable, Iterator
+from types import SimpleNamespace
+from typing import Any
+
+import pypdf
+import pytest
+from hypothesis import HealthCheck, given, settings
+from hypothesis import strategies as st
+from pypdf.annotations import FreeText
+from pypdf.generic import (
+    ArrayObject,
+    DictionaryObject,
+    NameObject,
+    TextStringObject,
+)
+from tests.audit import verifying as by
+
+from lineproof.audit import verify_pdf
+from lineproof.audit.verify import Outcome, Source, Verification, Where, verify
+from lineproof.errors import UserError
+from lineproof.package import Package, to_pdf
+
+WORKING = 3
+"""The page of the small package on which its working stands, from 0."""
+
+
+@pytest.fixture(autouse=True, scope="module")
+def printed_once() -> Iterator[None]:
+    """Printing a record again gives the same bytes: each is printed once for all tests."""
+    known: dict[tuple[str, ...], bytes] = {}
+
+    def printed(package: Package) -> bytes:
+        key = (*(calc.record_text for calc in package.calcs), package.facts.paper, str(
+            [calc.blocks for calc in package.calcs]))  # fmt: skip
+        if key not in known:
+            known[key] = to_pdf(package)
+        return known[key]
+
+    with pytest.MonkeyPatch.context() as patch:
+        patch.setattr(verify_pdf, "to_pdf", printed)
+        yield
+
+
+def said(found: Verification) -> str:
+    return "\n".join(altered.sentence for altered in found.alterations)
+
+
+def number(content: bytes, digit: str, page: int = WORKING) -> by.Spot:
+    """Return the first glyph of a digit on a page."""
+    return next(spot for spot in by.spots(content) if (spot.page, spot.digit) == (page, digit))
+
+
+def drawn(text: str, x: float, y: float) -> bytes:
+    """Return operators that draw digits with the fonts of the page, as our printer does."""
+    codes = by.codes_of(by.pdf(), WORKING)
+    shown = "".join(f"\\{codes[c] >> 8:03o}\\{codes[c] & 255:03o}" for c in text)
+    return (
+        f"\nq 1 0 0 -1 {x} {y} cm/c0 cs 0 scn\nBT 0 Tr/f0 10 Tf 1 0 0 -1 0 0 Tm({shown})Tj\nET\nQ\n"
+    ).encode()
+
+
+# -- intact, and what the record cannot prove --------------------------------------------------
+
+
+def test_a_package_as_issued_is_intact() -> None:
+    found = verify(by.pdf(), "beam.pdf")
+
+    assert (found.outcome, found.alterations, found.remarks) == (Outcome.INTACT, (), ())
+    assert [(p.calc, p.digest) for p in found.proofs] == [("H1", by.record().digest)]
+
+
+def test_prose_of_the_notebook_is_told_apart_as_not_provable() -> None:
+    found = verify(by.pdf(prose=True), "beam.pdf")
+
+    assert found.outcome is Outcome.INTACT
+    assert [(o.page, o.after, o.has_number) for o in found.outside] == [
+        (WORKING + 1, "", True), (WORKING + 1, "1.15", True),
+    ]  # fmt: skip
+    assert "7 of 9 bars" in found.outside[0].text
+
+
+def test_a_notebook_to_compare_with_proves_the_prose_too() -> None:
+    against = [Source(by.record(), by.PROSE)]
+    issued = by.pdf(prose=True)
+    twelfth = [spot for spot in by.spots(issued) if spot.page == WORKING and spot.digit == "9"]
+
+    assert verify(issued, "beam.pdf", against).outside == ()
+    forged = [by.redrawn(issued, WORKING, spot.put("5")) for spot in twelfth]
+    outcomes = [verify(content, "beam.pdf", against).outcome for content in forged]
+    assert set(outcomes) == {Outcome.ALTERED}
+
+
+def test_another_paper_is_recognised() -> None:
+    from dataclasses import replace  # noqa: PLC0415 - here only
+
+    from lineproof.package import build_package  # noqa: PLC0415 - here only
+
+    package = build_package([by.record()])
+    a4 = to_pdf(replace(package, facts=replace(package.facts, paper="a4")))
+
+    assert verify(a4, "beam.pdf").outcome is Outcome.INTACT
+
+
+# -- forged --------------------------------------------------------------------------------------
+
+
+@settings(
+    max_examples=30, deadline=None, suppress_health_check=[HealthCheck.too_slow],
+)  # fmt: skip
+@given(data=st.data())
+def test_any_other_digit_anywhere_in_the_print_is_found(data: st.DataObject) -> None:
+    content = by.pdf()
+    spot = data.draw(st.sampled_from(by.spots(content)))
+    digit = data.draw(st.sampled_from(sorted(set(spot.codes) - {spot.digit})))
+
+    found = verify(by.redrawn(content, spot.page, spot.put(digit)), "beam.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+
+
+@settings(
+    max_examples=20, deadline=None, suppress_health_check=[HealthCheck.too_slow],
+)  # fmt: skip
+@given(data=st.data())
+def test_a_digit_among_prose_is_found_wherever_the_record_prints_it(data: st.DataObject) -> None:
+    """With prose between, pages break elsewhere: numbers of the record are still all compared."""
+    content = by.pdf(prose=True)
+    prose = {"7", "9", "1", "2", "6", "5", "0"}  # digits of the prose stand outside the record
+    spot = data.draw(
+        st.sampled_from([s for s in by.spots(content) if s.page != WORKING or s.digit not in prose])
+    )
+    digit = data.draw(st.sampled_from(sorted(set(spot.codes) - {spot.digit})))
+
+    found = verify(by.redrawn(content, spot.page, spot.put(digit)), "beam.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+
+
+def test_an_altered_number_names_page_line_and_both_numbers() -> None:
+    """6300 is the length of the first bar mark in the table of the last part, page 4."""
+    spots = [spot for spot in by.spots(by.pdf()) if spot.page == WORKING]
+    place = "".join(spot.digit for spot in spots).rindex("6300")
+
+    found = verify(by.redrawn(by.pdf(), WORKING, spots[place + 1].put("8")), "beam.pdf")
+
+    assert [(a.calc, a.page, a.where) for a in found.alterations] == [("H1", 4, Where.PRINT)]
+    assert "6800" in found.alterations[0].found
+    assert "6300" in found.alterations[0].recorded
+
+
+def test_a_white_box_with_a_new_number_on_it_is_found() -> None:
+    box = b"\nq 1 0 0 -1 500 400 cm/c0 cs 1 scn 0 0 m 60 0 l 60 12 l 0 12 l\nh\nf\nQ\n"
+
+    over = box + drawn("999", 500, 390)
+    found = verify(by.redrawn(by.pdf(), WORKING, lambda c: c + over), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert "a box or a line is drawn here" in said(found)
+    assert "999" in said(found)
+
+
+def test_a_number_written_beside_another_is_found() -> None:
+    """In the middle of the stream, on the very height of a line, as if it belonged to it."""
+    spot = number(by.pdf(), "4")
+    operators = by.contents(by.pdf(), WORKING)
+    start = operators.rindex(b"\nq 1 0 0 -1 ", 0, spot.start) + 1
+    x, y = (float(n) for n in operators[start:].split()[5:7])
+    added = drawn("1", x - 6, y)
+
+    found = verify(
+        by.redrawn(by.pdf(), WORKING, lambda c: c[:start] + added.lstrip() + c[start:]), "b.pdf"
+    )
+
+    assert found.outcome is Outcome.ALTERED
+
+
+def test_a_line_of_its_own_that_looks_like_the_working_is_found() -> None:
+    operators = by.contents(by.pdf(), WORKING)
+    label = re.search(rb"q 1 0 0 -1 116\.\d+ ([\d.]+) cm/c0 cs 0 scn\nBT 0 Tr/f1 10 Tf", operators)
+    assert label is not None
+    start = operators.rindex(b"EMC/", 0, label.start()) + 3
+    y = float(label[1]) + 4
+    bold = operators[label.start() : operators.index(b"Q\n", label.start()) + 2]
+    row = b"/Span<</MCID 900>>BDC\n" + bold.replace(label[1], b"%.2f" % y) + b"EMC"
+
+    found = verify(by.redrawn(by.pdf(), WORKING, lambda c: c[:start] + row + c[start:]), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+
+
+def test_two_numbers_that_change_places_are_found() -> None:
+    """The lengths 6300 and 2150 of two bar marks, by their heights only."""
+    operators = by.contents(by.pdf(), WORKING)
+    heights = sorted({float(y) for y in re.findall(rb"q 1 0 0 -1 [\d.]+ ([\d.]+) cm", operators)})
+    one, other = heights[2], heights[3]
+
+    def swapped(content: bytes) -> bytes:
+        texts = [f"{y:.6f}".rstrip("0").encode() for y in (one, other)]
+        exact = [re.search(rb" (%b\d*) cm" % re.escape(text[:7]), content) for text in texts]
+        assert exact[0] is not None
+        assert exact[1] is not None
+        first, second = exact[0][1], exact[1][1]
+        return (
+            content.replace(b" %b cm" % first, b" @ cm")
+            .replace(b" %b cm" % second, b" %b cm" % first)
+            .replace(b" @ cm", b" %b cm" % second)
+        )
+
+    found = verify(by.redrawn(by.pdf(), WORKING, swapped), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert "stands at another place" in said(found)
+
+
+def test_a_number_that_is_not_shown_any_more_is_found() -> None:
+    """Text drawn in mode 3 is there to copy but not to see."""
+    found = verify(
+        by.redrawn(by.pdf(), WORKING, lambda c: c.replace(b"BT 0 Tr", b"BT 3 Tr", 40)), "b.pdf"
+    )
+
+    assert found.outcome is Outcome.ALTERED
+    assert Where.DRAWN in {altered.where for altered in found.alterations}
+
+
+def test_a_text_layer_that_says_another_digit_is_found() -> None:
+    """Whoever copies or searches would read 7 for every 4; the page looks as before."""
+
+    def altered(content: bytes) -> bytes:
+        made = by.writer(content)
+        fonts: Any = made.pages[WORKING]["/Resources"]["/Font"]  # type: ignore[index]
+        stream = fonts["/f0"]["/ToUnicode"].get_object()
+        changed = stream.get_data().replace(b"<0034>\n", b"<0037>\n")
+        assert changed != stream.get_data()
+        stream.set_data(changed)
+        return by.written(made)
+
+    assert verify(altered(by.pdf()), "b.pdf").outcome is Outcome.ALTERED
+
+
+def test_a_font_that_draws_another_digit_is_found() -> None:
+    """The text layer is as before; the glyphs of 4 and 7 have changed places in the font."""
+    from fontTools.cffLib import CFFFontSet  # noqa: PLC0415 - here only
+
+    made = by.writer(by.pdf())
+    fonts: Any = made.pages[WORKING]["/Resources"]["/Font"]  # type: ignore[index]
+    codes = by.codes_of(by.pdf(), WORKING)
+    descriptor = fonts["/f0"]["/DescendantFonts"][0].get_object()["/FontDescriptor"].get_object()
+    stream = descriptor["/FontFile3"].get_object()
+    font = CFFFontSet()
+    font.decompile(io.BytesIO(stream.get_data()), None)
+    glyphs = font[0].CharStrings
+    names = [f"cid{codes[digit]:05d}" for digit in "47"]
+    pair = [glyphs[name] for name in names]
+    for name, glyph in zip(names, reversed(pair), strict=True):
+        glyphs[name] = glyph
+    out = io.BytesIO()
+    font.compile(out, SimpleNamespace(recalcBBoxes=False))
+    stream.set_data(out.getvalue())
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert Where.DRAWN in {altered.where for altered in found.alterations}
+
+
+def test_a_page_taken_out_is_found() -> None:
+    made = by.writer(by.pdf())
+    made.remove_page(WORKING)
+
+    assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
+
+
+def test_pages_in_another_order_are_found() -> None:
+    made = by.writer(by.pdf())
+    kids: Any = made.root_object["/Pages"]["/Kids"]  # type: ignore[index]
+    kids[2], kids[3] = kids[3], kids[2]
+
+    assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
+
+
+# -- handled by others -----------------------------------------------------------------------------
+
+
+def test_a_comment_laid_over_a_page_is_told_and_alters_no_line() -> None:
+    made = by.writer(by.pdf())
+    made.add_annotation(WORKING, FreeText(text="M = 999", rect=(100, 100, 200, 120)))
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert found.outcome is Outcome.HANDLED
+    assert "page 4: laid over by others: FreeText “M = 999”" in found.remarks
+
+
+def signed(content: bytes) -> bytes:
+    """Return a PDF with a signature field appended, as a signing program does."""
+    made = by.writer(content, incremental=True)
+    value = DictionaryObject({
+        NameObject("/Type"): NameObject("/Sig"),
+        NameObject("/Filter"): NameObject("/Adobe.PPKLite"),
+        NameObject("/Name"): TextStringObject("A. Engineer, P.Eng."),
+    })  # fmt: skip
+    entry = DictionaryObject({
+        NameObject("/FT"): NameObject("/Sig"),
+        NameObject("/T"): TextStringObject("Signature1"),
+        NameObject("/V"): made._add_object(value),
+    })  # fmt: skip
+    form = DictionaryObject({NameObject("/Fields"): ArrayObject([made._add_object(entry)])})
+    made.root_object[NameObject("/AcroForm")] = made._add_object(form)
+    return by.written(made)
+
+
+def test_a_signature_appended_seals_the_package_and_leaves_it_intact() -> None:
+    sealed = signed(by.pdf())
+
+    found = verify(sealed, "b.pdf")
+
+    assert sealed.startswith(by.pdf())
+    assert found.outcome is Outcome.HANDLED
+    assert any("A. Engineer, P.Eng." in remark for remark in found.remarks)
+
+
+def test_a_change_appended_is_found_and_the_issue_before_it_is_told_intact() -> None:
+    spot = number(by.pdf(), "4")
+    forged = by.redrawn(by.pdf(), WORKING, spot.put("7"), incremental=True)
+
+    found = verify(forged, "b.pdf")
+
+    assert forged.startswith(by.pdf())
+    assert found.outcome is Outcome.ALTERED
+    assert any("the package as issued, intact" in remark for remark in found.remarks)
+
+
+def merged(*contents: bytes, keep: bool = True) -> bytes:
+    """Return PDFs one after another; ``keep`` takes over what is attached to them."""
+    made = pypdf.PdfWriter()
+    for content in contents:
+        reader = pypdf.PdfReader(io.BytesIO(content))
+        made.append(reader)
+        for name, parts in reader.attachments.items() if keep else ():
+            for part in parts:
+                made.add_attachment(name, part)
+    return by.written(made)
+
+
+def test_pages_of_others_before_and_after_leave_the_content_intact() -> None:
+    found = verify(merged(by.plain_page("Letter"), by.pdf(), by.plain_page("Letter")), "b.pdf")
+
+    assert (found.outcome, said(found)) == (Outcome.HANDLED, "")
+    assert (found.pages, found.own_pages) == (8, 6)
+    assert "2 page(s) of others before, between or after" in found.remarks
+
+
+def test_a_number_forged_in_a_merged_file_names_its_page_of_that_file() -> None:
+    forged = by.redrawn(by.pdf(), WORKING, number(by.pdf(), "4").put("7"))
+
+    found = verify(merged(by.plain_page("Letter"), forged), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert {altered.page for altered in found.alterations} == {WORKING + 2}
+
+
+def test_two_packages_in_one_file_are_both_verified() -> None:
+    found = verify(merged(by.pdf(), by.pdf("H2")), "b.pdf")
+
+    assert (found.outcome, said(found)) == (Outcome.HANDLED, "")
+    assert [proof.calc for proof in found.proofs] == ["H1", "H2"]
+    assert "2 packages in one file" in found.remarks
+
+
+def test_the_same_calc_twice_is_a_message() -> None:
+    with pytest.raises(UserError, match="two records of calc 'H1' in one file"):
+        verify(merged(by.pdf(), by.pdf()), "b.pdf")
+
+
+# -- stripped, not ours, damaged -------------------------------------------------------------------
+
+
+def test_a_package_without_its_record_is_stripped_and_compared_with_one_given() -> None:
+    stripped = merged(by.pdf(), keep=False)
+    forged = by.redrawn(stripped, WORKING, number(by.pdf(), "4").put("7"))
+    against = [Source(by.record())]
+
+    assert verify(stripped, "b.pdf").outcome is Outcome.STRIPPED
+    found = verify(stripped, "b.pdf", against)
+    assert (found.outcome, said(found)) == (Outcome.STRIPPED, "")
+    assert [proof.calc for proof in found.proofs] == ["H1"]
+    assert said(verify(forged, "b.pdf", against)) != ""
+
+
+def test_a_file_of_others_is_not_ours() -> None:
+    assert verify(by.plain_page("Record 0123456789abcdef"), "b.pdf").outcome is Outcome.NOT_OURS
+
+
+def encrypted() -> bytes:
+    made = by.writer(by.pdf())
+    made.encrypt("secret", algorithm="RC4-128")
+    return by.written(made)
+
+
+@pytest.mark.parametrize(
+    ("content", "told"),
+    [
+        (lambda: b"PK\x03\x04 no pdf", "not a PDF"),
+        (lambda: by.pdf()[: len(by.pdf()) // 2], "damaged"),
+        (encrypted, "encrypted"),
+    ],
+    ids=["no PDF", "cut off", "encrypted"],
+)
+def test_what_cannot_be_read_is_told(content: Callable[[], bytes], told: str) -> None:
+    with pytest.raises(UserError, match=told):
+        verify(content(), "b.pdf")
+
+
+def test_a_file_with_bytes_missing_inside_is_never_called_intact() -> None:
+    content = by.pdf()
+    outcomes: set[str] = set()
+    for start in range(2000, len(content) - 9000, 20_000):
+        try:
+            outcomes.add(verify(content[:start] + content[start + 7000 :], "b.pdf").outcome)
+        except UserError as error:
+            outcomes.add(error.faults[0].partition(",")[0])
+
+    assert outcomes.isdisjoint({Outcome.INTACT, Outcome.HANDLED})
