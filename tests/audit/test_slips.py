@@ -1,66 +1,220 @@
-"""The slip finder: a claim made with one slip is explained by that slip."""
+"""The slip finder: where it looks, in which order it tells, when it says nothing."""
 
 from __future__ import annotations
 
-from functools import cache
+import math
 
 import pytest
+from tests.audit.slip_sheet import beam, claim_of, slips, typed
+from tests.beams.continuous.flow import analysed, record_so_far
 
-from lineproof.audit.data import Claim, read_from
+from lineproof.audit.data import Interval
 from lineproof.audit.graph import Graph
-from lineproof.audit.slips import find_slips, none_fits
-from lineproof.quantity.units import internal_factor
+from lineproof.audit.slip_digits import changed, swapped
+from lineproof.audit.slip_rank import MOST
+from lineproof.audit.slips import find_slips, none_fits, searching
 from lineproof.sheet import Sheet
 
-
-@cache
-def section() -> Graph:
-    """A T section by its own lines: flexure and stirrups, numbers that a hand can follow."""
-    sheet = Sheet("S1", "Section by hand", project={"codes": {"pair": "NBC 2015 + A23.3-14"}})
-    with sheet.part("section-1", "Section"):
-        for symbol, typed, title in (
-            ("h", "600 mm", "overall depth"), ("b_w", "350 mm", "width of the web"),
-            ("b_f", "1500 mm", "width of the flange"), ("d", "540 mm", "effective depth"),
-            ("f_c", "30 MPa", "strength of concrete"), ("f_y", "400 MPa", "yield strength"),
-            ("phi_c", "0.65", "resistance factor for concrete"),
-            ("phi_s", "0.85", "resistance factor for reinforcement"),
-            ("alpha_1", "0.805", "stress of the block"), ("n_1", "4", "number of bars"),
-            ("A_b", "500 mm2", "area of one bar"), ("d_b", "25.2 mm", "diameter of the bar"),
-        ):  # fmt: skip
-            sheet.given(symbol, typed, title)
-        sheet.line("A_s = n_1*A_b", unit="mm2", title="Area of the bars")
-        sheet.line("a = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b_f)", unit="mm", title="Depth of block")
-        sheet.line("M_r = phi_s*A_s*f_y*(d - a/2)", unit="kN.m", title="Resistance")
-    return Graph(sheet.close())
+T = 0.85 * 2000 * 400
+BLOCK = 0.805 * 0.65 * 30
+A = T / (BLOCK * 1500)
+D = 600 - 40 - 11.3 - 25.2 / 2
+EVERYTHING = frozenset(beam().stored)
 
 
-def claimed(entry_id: str, typed: str, unit: str) -> Claim:
-    factor = internal_factor(unit)
-    return Claim(entry_id, typed, unit, float(typed) * factor, read_from(typed).times(factor))
+def test_a_slip_in_an_unclaimed_line_is_carried_on_to_the_claim() -> None:
+    # The web in place of the flange in the block, which nobody claimed: 123.8 mm for 28.9.
+    wrong = T / (BLOCK * 350)
+
+    found = slips("sag-1/M_r", T * (D - wrong / 2) / 1e6, claimed={"sag-1/d", "sag-1/A_s"})
+
+    assert found[0].kind == "other quantity"
+    assert "b_w (1.4, given b_w) = 350.0 mm in place of b_f" in found[0].sentence
+    assert "in a (" in found[0].sentence
 
 
-def first(entry_id: str, typed: str, unit: str) -> str:
-    graph = section()
-    found = find_slips(graph, entry_id, {}, claimed(entry_id, typed, unit), set(graph.stored))
-    assert found, none_fits(graph, entry_id)
-    return f"{found[0].kind}: {found[0].sentence}"
+def test_a_claimed_line_stops_the_search_above_it() -> None:
+    wrong = T / (BLOCK * 350)
+    claimed = EVERYTHING
+
+    found = slips("sag-1/M_r", T * (D - wrong / 2) / 1e6, claimed=claimed)
+
+    assert all("in a (" not in slip.sentence for slip in found)
 
 
-def test_a_factor_left_out() -> None:
-    # 2000*400/(0.805*0.65*30*1500) = 800000/23546.25 = 33.98
-    assert "phi_s" in first("section-1/a", "34.0", "mm")
+def test_a_looked_up_value_wrong_wherever_it_is_used() -> None:
+    # phi_s = 0.9 in the block and in the resistance alike.
+    tension = 0.9 * 2000 * 400
+    wrong = tension * (D - tension / (BLOCK * 1500) / 2) / 1e6
+
+    found = slips("sag-1/M_r", wrong, claimed={"sag-1/d", "sag-1/A_s"})
+
+    assert "phi_s (1.12, given phi_s) = 0.9000" in found[0].sentence
+    assert "wherever it is used" in found[0].sentence
 
 
-def test_the_web_for_the_flange() -> None:
-    # 0.85*2000*400/(0.805*0.65*30*350) = 680000/5494.125 = 123.77
-    assert "b_w (1.2, width of the web) = 350.0 mm in place of b_f" in first(
-        "section-1/a", "123.8", "mm"
+def test_values_that_the_claim_uses_count_and_not_those_recorded() -> None:
+    # The claimed d is 530; h in place of d is told beside it, from the claimed a of 30.
+    used = {"sag-1/a": Interval(29.5, 30.5), "sag-1/d": Interval(529.5, 530.5)}
+
+    found = slips("sag-1/M_r", T * (600 - 30 / 2) / 1e6, used=used)
+
+    assert "h (1.3, given h) = 600.0 mm in place of d (4.5, line of d) = 530.0" in (
+        found[0].sentence
     )
 
 
-@pytest.mark.parametrize("typed", ["1234567"])
-def test_none_fits(typed: str) -> None:
-    graph = section()
-    claim = claimed("section-1/M_r", typed, "kN.m")
-    assert find_slips(graph, "section-1/M_r", {}, claim, set(graph.stored)) == ()
-    assert none_fits(graph, "section-1/M_r").startswith("No single slip reproduces")
+def test_a_claimed_value_is_not_taken_as_what_follows() -> None:
+    # The table of values used holds the claim itself for a claimed line.
+    wrong = T * (600 - A / 2) / 1e6
+    used = {"sag-1/M_r": Interval(wrong * 1e6, wrong * 1e6)}
+
+    assert slips("sag-1/M_r", wrong, used=used) == slips("sag-1/M_r", wrong)
+
+
+def test_rounding_of_the_arguments_is_allowed_for() -> None:
+    # With a = 29 for 28.88 and d printed as 536 the claim is off by more than its own digits.
+    used = {"sag-1/a": Interval(28.5, 29.5), "sag-1/d": Interval(535.5, 536.5)}
+    wrong = 2000 * 400 * (536.45 - 29 / 2) / 1e6  # phi_s left out, d nearer 536.4 in truth
+
+    found = slips("sag-1/M_r", wrong, digits=5, used=used)
+
+    assert found[0].kind == "factor left out"
+    assert "within the digits of its arguments" in found[0].sentence
+    assert not slips("sag-1/M_r", wrong, digits=5)
+
+
+def test_a_common_slip_is_told_before_a_far_fetched_one() -> None:
+    # 536.1 + 11.3 = 547.4: the stirrup left out; a claim of three digits, 547, is met by more.
+    found = slips("sag-1/d", D + 11.3, digits=3)
+
+    assert found[0].kind == "term left out"
+    assert [slip.likely for slip in found] == sorted((s.likely for s in found), reverse=True)
+
+
+def test_a_miscopied_result_is_told_after_what_explains_it_better() -> None:
+    # h for d gives 398.2 kN.m; 354.7 as 394.7 would need another claim: 354.70 + 40 = 394.70.
+    by_h = slips("sag-1/M_r", T * (600 - A / 2) / 1e6)
+    by_pen = slips("sag-1/M_r", T * (D - A / 2) / 1e6 + 40)
+
+    assert by_h[0].kind == "other quantity"
+    assert "mistyped digit" in {slip.kind for slip in by_pen}
+
+
+def test_the_same_value_found_twice_is_told_once() -> None:
+    # n_v left out, one leg, A_t in place of A_v: all of them 100 mm2.
+    found = slips("shear-1-left/A_v", 100.0)
+
+    assert len({slip.value for slip in found}) == len(found)
+    assert found[0].kind == "stirrup legs"
+    assert "factor left out" in found[0].also
+
+
+@pytest.mark.parametrize("value", [1.234567e9, 0.7231])
+def test_no_slip_fits(value: float) -> None:
+    assert slips("sag-1/M_r", value) == ()
+    assert none_fits(beam(), "sag-1/M_r") == (
+        "No single slip reproduces the value claimed for M_r (4.8, line of M_r)."
+    )
+
+
+@pytest.mark.parametrize("entry_id", sorted(EVERYTHING))
+@pytest.mark.parametrize("factor", [-1.0, 0.5, 1.21])
+def test_never_more_than_a_checker_reads(entry_id: str, factor: float) -> None:
+    graph = beam()
+    claim = claim_of(graph, entry_id, graph[entry_id].entry["value"] * factor, 2)
+
+    found = find_slips(graph, entry_id, {}, claim)
+
+    assert len(found) <= MOST
+    assert all(math.isfinite(slip.value) and slip.likely > 0 for slip in found)
+
+
+def test_a_table_searched_as_a_whole_says_the_same_as_line_by_line() -> None:
+    graph = beam()
+    used: dict[str, Interval] = {}
+    find = searching()
+    for entry_id in ("sag-1/M_r", "sag-1/a", "shear-1-left/V_s", "loads/w_f"):
+        claim = claim_of(graph, entry_id, graph[entry_id].entry["value"] / 2)
+
+        assert find(graph, entry_id, used, claim, {"sag-1/d"}) == find_slips(
+            graph, entry_id, used, claim, {"sag-1/d"}
+        )
+
+
+def hostile() -> Graph:
+    """Return lines whose edits divide by zero, take roots of negatives and leave the range."""
+    sheet = Sheet("S2", "Hostile numbers")
+    with sheet.part("given", "Given"):
+        for symbol, value in (("a", "2 mm"), ("b", "2 mm"), ("c", "0 mm"), ("p", "1e12 mm")):
+            sheet.given(symbol, value)
+    with sheet.part("lines", "Lines"):
+        sheet.line("d = sqrt(a*b - c**2)", unit="mm")
+        sheet.line("e_1 = a*b/(a + c)", unit="mm")
+        sheet.line("f_1 = p**3/(p*p)*(a/(b + c))**0.5", unit="mm")
+        sheet.line("g_1 = cbrt(a*b*(a + c)) + min(a, b, c)", unit="mm")
+    return Graph(sheet.close())
+
+
+@pytest.mark.parametrize("symbol", ["d", "e_1", "f_1", "g_1"])
+@pytest.mark.parametrize("value", [-3.0, 0.0, 1e-9, 4.0, 1e200])
+def test_hostile_numbers_are_passed_over(symbol: str, value: float) -> None:
+    graph = hostile()
+
+    found = find_slips(
+        graph, f"lines/{symbol}", {}, claim_of(graph, f"lines/{symbol}", value), graph.stored
+    )
+
+    assert all(math.isfinite(slip.value) for slip in found)
+
+
+def test_a_line_that_has_no_value_from_what_is_used_has_no_slips() -> None:
+    graph = hostile()
+    used = {"given/a": Interval(-2, -2)}  # a root of -4
+
+    assert find_slips(graph, "lines/d", used, claim_of(graph, "lines/d", 3.0), ()) == ()
+
+
+def test_claims_that_are_no_plain_number_are_searched_all_the_same() -> None:
+    claim = typed("sag-1/a", "1e2", "mm")
+
+    assert all(slip.sentence for slip in find_slips(beam(), "sag-1/a", {}, claim, EVERYTHING))
+
+
+def test_a_given_mistyped_and_a_constant_of_another_edition() -> None:
+    assert slips("given/b_w", 530.0)[0].kind == "transposed digits"
+    assert slips("given/phi_c", 0.6)[0].kind == "constant of another edition or standard"
+
+
+def test_a_support_moment_found_by_analysis() -> None:
+    """Three spans of 7.6, 9.2 and 7.6 m: w l^2/8 on the middle one is no analysis."""
+    graph = Graph(record_so_far(analysed()))
+    load = graph.stored["loads/w_D2"]
+    claim = claim_of(graph, "analysis/M_2D", -load * 9200**2 / 8 / 1e6)
+
+    found = find_slips(graph, "analysis/M_2D", {}, claim, frozenset(graph.stored))
+
+    assert found[0].kind == "simple span for continuous"
+    assert "l_2**2/8" in found[0].sentence
+
+
+def test_one_load_of_the_analysis_too_large_is_seen_in_a_reaction() -> None:
+    """Support moments are proportional to loads: the dead load of all spans by 1.25."""
+    graph = Graph(record_so_far(analysed()))
+    right = graph.stored["analysis/R_1D"] / 1e3
+    claimed = frozenset({"analysis/R_1D"})
+
+    found = find_slips(
+        graph, "analysis/R_1D", {}, claim_of(graph, "analysis/R_1D", 1.25 * right), claimed
+    )
+
+    assert found[0].kind == "load factor"
+
+
+def test_digits_of_the_pen() -> None:
+    assert list(swapped("7.6")) == ["6.7"]
+    assert list(swapped("0.00085")) == ["0.00058"]
+    assert list(swapped("024")) == ["204", "042"]
+    assert len(list(changed("350"))) == 27
+    assert len(list(changed("12300"))) == 27  # the zeros hold the place
+    assert "8.6" in set(changed("7.6"))

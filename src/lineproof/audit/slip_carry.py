@@ -18,8 +18,8 @@ MOST_LINES = 60
 MOST_FOUND = 2000
 """So many found values are kept while one table of claims is searched."""
 
-STRIDE = 6
-"""Of the edits above a claim, so many lie between two that are worked at first."""
+STRIDES = (24, 6, 1)
+"""Of the sorted edits above a claim every so many are worked at first, then more between them."""
 
 Way = Callable[[float], float]
 """The claim's value as a function of a line above; raises where there is no value."""
@@ -192,23 +192,29 @@ def worked_or_none(way: Way, value: float) -> float | None:
 def fitting(way: Way, values: Sequence[float], low: float, high: float) -> list[int]:
     """Return which of the sorted values a way carries between low and high.
 
-    Works every few values and those between only where the target may lie there; what turns back
-    sharply between two of its values may be missed.
+    Works some of the values, and those between two of them only where the target may lie there;
+    what turns back sharply between two may be missed.
     """
-    found: list[int] = []
-    last = len(values) - 1
-    before: float | None = None
-    for at in range(0, last + STRIDE, STRIDE):
-        here = worked_or_none(way, values[min(at, last)])
-        if at and _may_lie_between(before, here, low, high):
-            for inner in range(at - STRIDE + 1, min(at, last)):
-                between = worked_or_none(way, values[inner])
-                if between is not None and low <= between <= high:
-                    found.append(inner)
-        if here is not None and low <= here <= high:
-            found.append(min(at, last))
-        before = here
-    return list(dict.fromkeys(found))
+    known: dict[int, float | None] = {}
+
+    def at(index: int) -> float | None:
+        if index not in known:
+            known[index] = worked_or_none(way, values[index])
+        return known[index]
+
+    def look(first: int, last: int, strides: tuple[int, ...]) -> None:
+        stride, *finer = strides
+        for start in range(first, last, stride):
+            end = min(start + stride, last)
+            if finer and _may_lie_between(at(start), at(end), low, high):
+                look(start, end, tuple(finer))
+            elif not finer:
+                at(start)
+
+    at(0)
+    look(0, len(values) - 1, STRIDES)
+    at(len(values) - 1)
+    return [k for k, value in known.items() if value is not None and low <= value <= high]
 
 
 def _may_lie_between(first: float | None, second: float | None, low: float, high: float) -> bool:

@@ -37,12 +37,16 @@ class Edit(NamedTuple):
 
 @dataclass(frozen=True, slots=True)
 class Line:
-    """A line under search: its node, its formula at the values used, what stands around it."""
+    """A line under search: its node, its formula at the values used, what stands around it.
+
+    ``above`` tells that it lies above the claim: large families, which fit anything, are left out.
+    """
 
     scope: Scope
     node: Node
     places: Places
     pairs: Pairs
+    above: bool = False
 
     @property
     def is_load(self) -> bool:
@@ -294,7 +298,7 @@ def _number(line: Line, at: int, text: str) -> Iterator[Edit]:
             "{:.6g} ({}) in place of the constant {}".format, other.value, other.source, text
         )
         yield Edit("edition", (at,), other.value, 0.0, words)
-    for typed in (*swapped(text), *changed(text)):
+    for typed in () if line.above else (*swapped(text), *changed(text)):
         words = partial("the constant {} mistyped as {}".format, text, typed)
         yield Edit("mistyped constant", (at,), float(typed), 0.0, words)
 

@@ -55,8 +55,11 @@ def other_quantities(line: Line, target: str, name: str) -> Iterator[Other]:
     # One of the many places with the same value is enough; the next ones are looked at first.
     values = {line.pairs[other][0] for other in seen}
     elsewhere = [(_place(line, target, other), other) for other in _elsewhere(line, target, seen)]
-    elsewhere.sort(key=lambda pair: pair[0] == "place")
-    elsewhere += [("far", other) for other in scope.far(line.node.part, unit, own[0])]
+    if line.above:
+        elsewhere = [pair for pair in elsewhere if pair[0] == "mirror"]
+    else:
+        elsewhere.sort(key=lambda pair: pair[0] == "place")
+        elsewhere += [("far", other) for other in scope.far(line.node.part, unit, own[0])]
     for family, other in elsewhere:
         value = line.pairs[other][0]
         if value not in values:

@@ -162,13 +162,15 @@ def _units(line: Line, target: str, name: str) -> Iterator[Other]:
             continue
         words = partial(_of, line, target, name, f"{{}} in the wrong unit: {why}")
         yield Other(family, value * factor, half * factor, words)
-    for factor in () if is_count else (10.0, 0.1):
+    for factor in () if is_count or line.above else (10.0, 0.1):
         words = partial(_of, line, target, name, "the decimal point of {} moved by one")
         yield Other("decimal", value * factor, half * factor, words)
 
 
 def _digits(line: Line, target: str, name: str) -> Iterator[Other]:
     node = line.scope.graph[target]
+    if line.above and node.kind != GIVEN:
+        return
     if node.kind == GIVEN:
         number, families = written(str(node.entry.get("typed", ""))), ("swapped", "mistyped")
     else:

@@ -22,8 +22,6 @@ FARTHER = 0.25
 """By so much (natural logarithm) a slip is less likely for each line it lies further up."""
 LOOSE = 3.0
 """At first fits are sought so many widths wide; then the width of each is worked out."""
-NOT_ABOVE = frozenset(("far", "mistyped constant", "mistyped argument", "place", "decimal"))
-"""Large families that are not tried in lines above the claimed one: they fit anything."""
 Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
 """What :func:`find_slips` is: graph, line, values used, claim, claimed ids; gives the slips."""
 MOST_KEPT = 400
@@ -144,7 +142,7 @@ class SlipSearch:
 
     def _line(self, entry_id: str) -> Line | None:
         if entry_id not in self._lines:
-            self._lines[entry_id] = _line(self._scope, self._pairs, entry_id)
+            self._lines[entry_id] = _line_above(self._scope, self._pairs, entry_id)
         return self._lines[entry_id]
 
     def _tried(self, entry_id: str) -> Tried | None:
@@ -164,13 +162,14 @@ def _claimed_line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
         if node.tree is not None:
             places = _places(scope, pairs, node)
             own[entry_id] = places.values[0], places.halves[0]
-        elif node.is_computed:
+            return Line(scope, node, places, own)
+        if node.is_computed:
             own[entry_id] = _found(node, pairs)
         else:
             own[entry_id] = scope.graph.stored[entry_id], 0.0
+        return Line(scope, node, _places(scope, own, node), own)
     except (*FAILURES, UserError):
         return None
-    return _line(scope, own, entry_id)
 
 
 def _found(node: Node, pairs: Pairs) -> Pair:
@@ -193,10 +192,10 @@ def _places(scope: Scope, pairs: Pairs, node: Node) -> Places:
     return Places(scope.places(node), named)
 
 
-def _line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
+def _line_above(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
     node = scope.graph[entry_id]
     try:
-        return Line(scope, node, _places(scope, pairs, node), pairs)
+        return Line(scope, node, _places(scope, pairs, node), pairs, above=True)
     except FAILURES:
         return None
 
@@ -223,7 +222,7 @@ def _above(line: Line) -> Tried:
             Edit(other.family, TOP, other.value, other.half, other.words, other.far)
             for other in others_for(line, line.node.id)
         ]
-    return _tried(line, [edit for edit in edits if edit.family not in NOT_ABOVE])
+    return _tried(line, edits)
 
 
 def _tried(line: Line, edits: Sequence[Edit]) -> Tried:
