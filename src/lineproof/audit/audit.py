@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Sequence
 
+import numpy as np
+
 from lineproof.audit.data import Audit, Claim, Finding
 from lineproof.audit.findings import findings_of, importance
 from lineproof.audit.graph import Graph
@@ -28,8 +30,9 @@ def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = 
     ``record`` is the right calculation; ``graph`` may be given where it was made already.
     """
     graph = graph or Graph(record)
-    judged = judge(graph, claims, find_slips)
-    return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged))
+    with np.errstate(all="ignore"):  # absurd claims lead procedures to infinities: no value
+        judged = judge(graph, claims, find_slips)
+        return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged))
 
 
 def audit_alone(record: Record, more: Iterable[Finding] = ()) -> Audit:

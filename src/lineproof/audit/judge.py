@@ -166,7 +166,8 @@ class _Judge:
 
     def _carried(self, node: Node, made: Judged) -> Judged:
         causes = self._causes(node)
-        wrong = tuple(i for i in causes if self.verdicts[i] in WRONG)
+        # A twin may stand before the line whose claim it repeats, which is judged later.
+        wrong = tuple(i for i in causes if self.verdicts.get(i, Verdict.INPUT) in WRONG)
         if wrong:
             note = f"follows from {self._named(wrong)}"
             return replace(made, verdict=Verdict.CARRIED, note=note, causes=wrong)
