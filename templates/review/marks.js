@@ -140,7 +140,7 @@ function merged(first, second) {
   const same = new Map();
   for (const found of [...first.findings, ...second.findings]) {
     const origin = JSON.stringify([found.by, found.at, found.text]);
-    same.set(origin, same.has(origin) ? joined(same.get(origin), found) : found);
+    same.set(origin, joined(same.get(origin) ?? found, found));
   }
   const records = new Map();
   for (const each of [...first.records, ...second.records]) {
@@ -184,7 +184,7 @@ function numbered(findings) {
     const number = taken.has(found.number) ? (free += 1) : found.number;
     taken.add(number);
     return { ...found, number };
-  });
+  }).sort(by((found) => [found.number]));
 }
 
 function by(key) {
