@@ -315,3 +315,18 @@ def test_absurd_claims_are_judged_and_break_nothing(draw: Any, count: int) -> No
         if each.verdict is Verdict.CARRIED:
             assert each.causes
     assert {i for f in made.findings for i in f.ids[:1]} <= set(texts)
+
+
+def test_a_rounding_errs_where_its_effect_does_however_small() -> None:
+    """M_f = 40.02 x 36/8 = 180.09 against 9000: utilisation 0.0200 either way.
+
+    181 asks for more, 180.0 (179.95 to 180.05) for less; 179.9 is no rounding.
+    """
+    givens = {"w_f": "40.02 kN/m", "l": "6 m", "M_r": "9e3 kN.m"}
+    sheet = sheet_of({"M_f = w_f*l**2/8": "kN.m"}, givens)
+    with sheet.part("checks", "Checks"):
+        sheet.check("M_f <= M_r", key="strength", title="Moment resistance")
+    light = sheet.close()
+    assert verdicts(light, {"beam/M_f": "181"})["beam/M_f"] is Verdict.SAFE_ROUNDING
+    assert verdicts(light, {"beam/M_f": "180.0"})["beam/M_f"] is Verdict.UNSAFE_ROUNDING
+    assert verdicts(light, {"beam/M_f": "179.9"})["beam/M_f"] is Verdict.ORIGIN

@@ -107,7 +107,8 @@ def _words(node: Node, judged: Judged, claim: Claim) -> str:
         return f"{as_typed(claim)} claimed; {judged.note}"
     follows, right = shown(node, judged.follows.middle), shown(node, judged.right)
     said = f"{as_typed(claim)} does not follow from the values that the claim uses; {follows} does"
-    return said if follows == right else f"{said}, and {right} is right"
+    said = said if follows == right else f"{said}, and {right} is right"
+    return f"{said}; it {judged.note}" if judged.note else said
 
 
 def as_typed(claim: Claim) -> str:

@@ -11,6 +11,7 @@ from lineproof.audit.graph import Graph, Node
 from lineproof.audit.other_methods import Bench, other_ways
 from lineproof.audit.propagate import Form, Worker, claimed_form
 from lineproof.audit.readings import Rounded, coarse_rounding, unit_slip
+from lineproof.audit.safe_side import is_safe
 from lineproof.audit.twins import twins_of
 from lineproof.audit.worlds import Worlds, unmoved_lines
 from lineproof.quantity.digits import rounded_text
@@ -24,8 +25,6 @@ WRONG = (Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, V
 """Verdicts whose values make those below carry something that is not right."""
 _DIGITS = 4
 _MOVED = 1e-9
-_SEEN = 0.0005
-"""Change of utilisation that counts as one."""
 
 
 def judge(
@@ -207,27 +206,12 @@ class _Judge:
         way = "up" if rounded.up else "down"
         shown = self._shown(node, rounded.of, _DIGITS + 1)
         note = f"{shown} rounded {way} to a step of {rounded.step} {claim.unit}".rstrip()
-        if self._is_safe(node.id, claim.value, rounded.of):
+        if is_safe(self.graph, node.id, claim.value, rounded.of):
             return replace(made, verdict=Verdict.SAFE_ROUNDING, note=f"{note}: conservative")
         return replace(
             made, verdict=Verdict.UNSAFE_ROUNDING, note=f"{note}: not conservative",
             slips=self._slips(node, claim),
         )  # fmt: skip
-
-    def _is_safe(self, entry_id: str, claimed: float, exact: float) -> bool:
-        """Tell whether no check downstream uses less of itself with the claimed value."""
-        with_claimed = self.graph.worked({entry_id: claimed}).truths
-        with_exact = self.graph.worked({entry_id: exact}).truths
-        for check in self.graph.checks():
-            before, after = with_exact.get(check.id), with_claimed.get(check.id)
-            if before is None or after is None:
-                continue
-            if after.holds and not before.holds:
-                return False
-            ratios = (before.utilisation, after.utilisation)
-            if None not in ratios and (ratios[1] or 0.0) < (ratios[0] or 0.0) - _SEEN:
-                return False
-        return True
 
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         if self.find is None:

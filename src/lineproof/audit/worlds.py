@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from lineproof.audit.data import Claim
-from lineproof.audit.graph import Graph
+from lineproof.audit.graph import Graph, Node
 from lineproof.audit.propagate import World
 
 
@@ -25,8 +25,8 @@ def unmoved_lines(
     """Return lines that kept the recorded value although an input that they use was changed.
 
     By line the ids of these inputs. An input counts as changed where one of its lines follows it,
-    or where one line alone rests on it; where several rest on it and none follows, it is the
-    input that was written wrongly.
+    where one line alone rests on it, or where it is a count, of bars or legs, and the area is that
+    of another count; where several lines rest on it and none follows, it was written wrongly.
     """
     found: dict[str, list[str]] = {}
     for claim in claims.values():
@@ -34,11 +34,15 @@ def unmoved_lines(
             continue
         lines = [i for i in _next_claimed(graph, claim.id, claims) if _is_moved(i, worlds)]
         follow = [i for i in lines if _follows(claims[i], worlds)]
-        if follow or len(lines) == 1:
+        if follow or len(lines) == 1 or _is_count(graph[claim.id]):
             for entry_id in lines:
                 if entry_id not in follow:
                     found.setdefault(entry_id, []).append(claim.id)
     return {entry_id: tuple(ids) for entry_id, ids in found.items()}
+
+
+def _is_count(node: Node) -> bool:
+    return not node.unit and node.symbol.startswith("n_") and node.stored == int(node.stored)
 
 
 def _next_claimed(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> list[str]:

@@ -1,0 +1,76 @@
+"""Findings of judged claims: sentences, clause, advice, severity by what happens to the checks."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+import pytest
+from tests.audit import hand
+from tests.audit.hand import beam, typed
+
+from lineproof.audit.audit import audit_claims
+from lineproof.audit.data import Finding, Severity
+from lineproof.audit.graph import Graph
+from lineproof.record import Record
+
+
+def found(record: Record, claims: Mapping[str, str]) -> tuple[Finding, ...]:
+    graph = Graph(record)
+    return audit_claims(record, [typed(graph, i, t) for i, t in claims.items()], graph).findings
+
+
+def test_no_finding_where_claims_agree_or_go_another_way() -> None:
+    """209 by K_r 1.8, d 535 rounded down: remarks, no findings."""
+    assert found(beam(), {"strength/M_r": "209", "strength/M_f": "180"}) == ()
+    assert found(beam(), {"beam/d": "535"}) == ()
+
+
+def test_an_origin_is_one_finding_with_the_lines_that_carry_it() -> None:
+    """A_s 900: M_r = 157.46 < 180: as claimed the check fails, with 206.64 it holds."""
+    (finding,) = found(beam(), {"beam/A_s": "900", "strength/M_r": "157.5"})
+    assert finding.ids == ("beam/A_s", "strength/M_r")
+    assert finding.what.endswith(
+        "900 mm2 does not follow from the values that the claim uses; 1200 mm2 does; "
+        "1 claimed line carries it"
+    )
+    assert finding.severity is Severity.MAJOR
+    assert [(e.holds_as_claimed, e.holds) for e in finding.effects] == [(False, True)]
+    assert finding.effects[0].claimed == pytest.approx(180 / 157.46, rel=1e-3)
+    assert finding.advice
+
+
+def test_severity_goes_by_the_checks() -> None:
+    """With w_f 60 M_f = 270 > 206.6 fails: a claim that makes it hold is critical."""
+    sheet = hand.sheet_of(givens=hand.GIVENS | {"w_f": "60 kN/m"})
+    with sheet.part("checks", "Span 1: checks"):
+        sheet.check("M_f <= M_r", key="strength", title="Moment resistance")
+    failing = sheet.close()
+    cases = [
+        (failing, {"beam/M_r": "300"}, Severity.CRITICAL),  # holds as claimed, fails when right
+        (beam(), {"strength/M_f": "150"}, Severity.MAJOR),  # 150/206.6 hides 180/206.6
+        (beam(), {"strength/M_f": "193"}, Severity.MINOR),  # asks for more than it needs
+        (beam(), {"given/w_f": "45 kN/m"}, Severity.MINOR),  # the same by an input
+        (beam(), {"given/h_f": "120 mm"}, Severity.OBSERVATION),  # nothing rests on it
+        (beam(), {"beam/d": "540"}, Severity.MINOR),  # a rounding that is not conservative
+    ]
+    for record, claims, severity in cases:
+        (finding,) = found(record, claims)
+        assert finding.severity is severity, claims
+
+
+def test_findings_come_the_gravest_first() -> None:
+    """h_f moves nothing; M_f 150 for 180 hides 0.87; d 500 asks for more."""
+    said = found(beam(), {"given/h_f": "120 mm", "strength/M_f": "150", "beam/d": "500"})
+    assert [f.ids[0] for f in said] == ["strength/M_f", "beam/d", "given/h_f"]
+
+
+def test_a_line_not_changed_with_its_input_says_so() -> None:
+    said = found(beam(), {"given/n_b": "5", "beam/A_s": "1200"})
+    assert [f.ids[0] for f in said] == ["given/n_b", "beam/A_s"]
+    assert "1200 mm2 does not follow from the values that the claim uses" in said[1].what
+    assert "1500 mm2 does, and 1200 mm2 is right; it is the value for other inputs" in said[1].what
+
+
+def test_a_slip_of_units_is_told_as_one() -> None:
+    (finding,) = found(beam(), {"strength/M_f": "180 N.mm"})
+    assert "180 N.mm claimed; reproduced exactly with N.mm in place of kN.m" in finding.what
