@@ -10,59 +10,44 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from functools import lru_cache
 
+from lineproof.formula.hashed import Hashed, kept_hash
+
 MOST_KEPT = 16384
 """Trees of which the names are kept: those of a large record, and of what is tried on them."""
 
 
-class _Node:
-    """What all nodes share: a hash that is worked out once, since trees are keys of many tables."""
-
-    __slots__ = ("hashed",)
-    hashed: int
-
-
-def _kept_hash(node: _Node) -> int:
-    try:
-        return node.hashed
-    except AttributeError:
-        pieces = [getattr(node, name) for name in node.__slots__]
-        made = hash((node.__class__.__name__, *pieces))
-        object.__setattr__(node, "hashed", made)
-        return made
-
-
 @dataclass(frozen=True, slots=True)
-class Number(_Node):
+class Number(Hashed):
     """A constant, kept as the author typed it (``0.0015``)."""
 
-    __hash__ = _kept_hash
+    __hash__ = kept_hash
 
     text: str
 
 
 @dataclass(frozen=True, slots=True)
-class Name(_Node):
+class Name(Hashed):
     """A quantity, by its id (``phi_s``)."""
 
-    __hash__ = _kept_hash
+    __hash__ = kept_hash
 
     id: str
 
 
 @dataclass(frozen=True, slots=True)
-class Negative(_Node):
+class Negative(Hashed):
     """The expression with its sign changed."""
 
-    __hash__ = _kept_hash
+    __hash__ = kept_hash
 
     of: Tree
 
 
 @dataclass(frozen=True, slots=True)
-class Binary(_Node):
+class Binary(Hashed):
     """Two expressions joined by ``+ - * / **``."""
 
-    __hash__ = _kept_hash
+    __hash__ = kept_hash
 
     op: str
     left: Tree
@@ -70,10 +55,10 @@ class Binary(_Node):
 
 
 @dataclass(frozen=True, slots=True)
-class Call(_Node):
+class Call(Hashed):
     """A function of the grammar applied to its arguments."""
 
-    __hash__ = _kept_hash
+    __hash__ = kept_hash
 
     function: str
     args: tuple[Tree, ...]

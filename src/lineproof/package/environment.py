@@ -66,26 +66,28 @@ class Interned:
     """The texts and trees of one document, in the order of their first use."""
 
     items: list[Any] = field(default_factory=list)
-    places: dict[object, int] = field(default_factory=dict)
+    places: dict[object, str] = field(default_factory=dict)
+    texts: dict[str, str] = field(default_factory=dict)
     long_words: bool = False
 
     def place(self, value: object) -> str:
         """Store a text or tree and return the only thing the template may print: ``t.at(n)``."""
-        match value:
-            case Verbatim(text):
-                return self._at(text, text)
-            case str():
+        if isinstance(value, str):
+            known = self.texts.get(value)
+            if known is None:
                 text = printable(value)
                 self.long_words = self.long_words or _LONG_WORD.search(text) is not None
-                return self._at(text, text)
-            case Prose(blocks):
-                return self._add([prose_tree(block) for block in blocks])
+                known = self.texts[value] = self._at(text, text)
+            return known
         if isinstance(value, _NODES):
             known = self.places.get(value)  # a symbol stands in many lines
             if known is None:
-                known = self.places[value] = len(self.items)
-                self.items.append(typst_tree(value))
-            return f"t.at({known})"
+                known = self.places[value] = self._add(typst_tree(value))
+            return known
+        if isinstance(value, Verbatim):
+            return self._at(value.text, value.text)
+        if isinstance(value, Prose):
+            return self._add([prose_tree(block) for block in value.blocks])
         msg = (
             f"{type(value).__name__} in the Typst template; only text, maths and prose are printed"
         )
@@ -94,9 +96,8 @@ class Interned:
     def _at(self, key: str, item: str) -> str:
         known = self.places.get(key)
         if known is None:
-            known = self.places[key] = len(self.items)
-            self.items.append(item)
-        return f"t.at({known})"
+            known = self.places[key] = self._add(item)
+        return known
 
     def _add(self, item: Any) -> str:
         self.items.append(item)
@@ -145,6 +146,7 @@ def _typst_environment() -> jinja2.Environment:
         autoescape=False,  # noqa: S701 - finalize interns every value, nothing is escaped
         finalize=intern,
         undefined=jinja2.StrictUndefined,
+        auto_reload=False,
         trim_blocks=True,
         lstrip_blocks=True,
     )
@@ -173,6 +175,7 @@ def _html_environment() -> jinja2.Environment:
         autoescape=True,
         finalize=finish,
         undefined=jinja2.StrictUndefined,
+        auto_reload=False,
         trim_blocks=True,
         lstrip_blocks=True,
     )

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from itertools import groupby
 
 from lineproof.typeset.chains import Chain
@@ -61,7 +61,7 @@ def working_lines(printed: PrintedRow) -> tuple[WorkingLine, ...]:
     if printed.conclusion and (not lines or lines[-1].wraps):
         lines.append(WorkingLine((), wraps=False))
     if lines:
-        lines[-1] = replace(lines[-1], conclusion=printed.conclusion)
+        lines[-1] = WorkingLine(lines[-1].chains, lines[-1].wraps, printed.conclusion)
     return tuple(lines)
 
 

@@ -20,6 +20,7 @@ from lineproof.typeset.rows import PrintedRow
 Entry = Mapping[str, Any]
 
 _SAME = 1e-9
+_SORTED = json.JSONEncoder(sort_keys=True)
 _REPEATABLE = frozenset({"given", "lookup", "line", "found", "decision", "check"})
 _NUMBERS = ("value", "left", "right", "utilisation")
 _OWN = frozenset({"id", "label", "title", "digest", "args", "closing", *_NUMBERS})
@@ -68,10 +69,9 @@ class Worked:
         if entry["kind"] not in _REPEATABLE or entry["id"] in self._marked or failed:
             return ""
         closing = entry.get("closing") or {}
-        return json.dumps(
+        return _SORTED.encode(
             {name: entry[name] for name in entry if name not in _OWN}
-            | {"closing": {name: closing[name] for name in closing if name not in _OWN}},
-            sort_keys=True,
+            | {"closing": {name: closing[name] for name in closing if name not in _OWN}}
         )
 
     def _told(self, entry: Entry, row: PrintedRow, key: str) -> PrintedRow | Repeated:

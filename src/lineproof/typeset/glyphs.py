@@ -57,10 +57,17 @@ def printable_tree(data: Any) -> Any:
 
 def tree_has_missing(data: Any) -> bool:
     """Tell whether any text inside plain JSON data has a character without a glyph."""
-    if isinstance(data, str):
-        return has_missing(data)
-    if isinstance(data, list):
-        return any(tree_has_missing(item) for item in data)
-    if isinstance(data, dict):
-        return any(tree_has_missing(item) for item in data.values())
-    return False
+    unusual: list[str] = []
+    waiting: list[Any] = [[data]]
+    while waiting:
+        items = waiting.pop()
+        for item in items.values() if isinstance(items, dict) else items:
+            if isinstance(item, float):  # figures hold little else
+                continue
+            if isinstance(item, str):
+                if not (item.isascii() and item.isprintable()):
+                    unusual.append(item)
+            elif isinstance(item, list | dict):
+                waiting.append(item)
+    # No accent joins a space, so that texts may be looked at side by side.
+    return has_missing(" ".join(unusual))

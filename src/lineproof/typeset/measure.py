@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from functools import lru_cache
 
 from lineproof.typeset.nodes import (
     TIMES,
@@ -28,8 +29,11 @@ _CHARACTER, _DIGIT, _SCRIPT, _FENCE, _ROOT = 0.52, 0.5, 0.7, 0.35, 0.75
 _SIGN_WIDTHS = {"relation": 1.35, "binary": 1.2, "prefix": 0.65, "comma": 0.45,
                 "open": 0.35, "close": 0.35}  # fmt: skip
 _THIN = 0.17
+_MOST_KEPT = 16384
+"""Nodes whose width is kept: the same symbols, units and numbers stand in many lines."""
 
 
+@lru_cache(maxsize=_MOST_KEPT)
 def width(math: Math) -> float:
     """Return the estimated width of a node, in em."""
     match math:

@@ -10,81 +10,105 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Literal
 
+from lineproof.formula.hashed import Hashed, kept_hash
+
 Role = Literal["binary", "relation", "prefix", "comma", "open", "close"]
 
 
 @dataclass(frozen=True, slots=True)
-class Letter:
+class Letter(Hashed):
     """A single italic letter, the base of a symbol."""
 
+    __hash__ = kept_hash
+
     text: str
 
 
 @dataclass(frozen=True, slots=True)
-class Word:
+class Word(Hashed):
     """Upright text: a subscript, the name of a function, a value in words."""
 
+    __hash__ = kept_hash
+
     text: str
 
 
 @dataclass(frozen=True, slots=True)
-class Digits:
+class Digits(Hashed):
     """An unsigned plain number as the record holds it (``12500.5``)."""
 
+    __hash__ = kept_hash
+
     text: str
 
 
 @dataclass(frozen=True, slots=True)
-class Sign:
+class Sign(Hashed):
     """An operator, relation sign or lone bracket, as the character that is printed."""
+
+    __hash__ = kept_hash
 
     text: str
     role: Role
 
 
 @dataclass(frozen=True, slots=True)
-class Thin:
+class Thin(Hashed):
     """The thin space that stands for multiplication."""
+
+    __hash__ = kept_hash
 
 
 @dataclass(frozen=True, slots=True)
-class Unit:
+class Unit(Hashed):
     """A unit in the closed list's ASCII spelling (``kN.m``), after its number."""
+
+    __hash__ = kept_hash
 
     text: str
 
 
 @dataclass(frozen=True, slots=True)
-class Prime:
+class Prime(Hashed):
     """The prime of f'c."""
+
+    __hash__ = kept_hash
 
 
 @dataclass(frozen=True, slots=True)
-class Row:
+class Row(Hashed):
     """Nodes side by side; a row never holds a row."""
+
+    __hash__ = kept_hash
 
     items: tuple[Math, ...]
 
 
 @dataclass(frozen=True, slots=True)
-class Fraction:
+class Fraction(Hashed):
     """Numerator over denominator."""
+
+    __hash__ = kept_hash
 
     top: Math
     bottom: Math
 
 
 @dataclass(frozen=True, slots=True)
-class Root:
+class Root(Hashed):
     """A square root, or with ``index`` "3" a cube root."""
+
+    __hash__ = kept_hash
 
     of: Math
     index: str = ""
 
 
 @dataclass(frozen=True, slots=True)
-class Scripts:
+class Scripts(Hashed):
     """A base with a subscript, a superscript or both."""
+
+    __hash__ = kept_hash
 
     base: Math
     sub: Math | None = None
@@ -92,8 +116,10 @@ class Scripts:
 
 
 @dataclass(frozen=True, slots=True)
-class Fence:
+class Fence(Hashed):
     """An expression between brackets or bars that grow with it."""
+
+    __hash__ = kept_hash
 
     of: Math
     left: str = "("

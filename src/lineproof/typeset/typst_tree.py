@@ -5,6 +5,8 @@ Each list begins with the node's key; ``templates/maths.typ`` builds the mark fr
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from lineproof.typeset.glyphs import printable
 from lineproof.typeset.nodes import (
     Digits,
@@ -25,11 +27,13 @@ from lineproof.typeset.nodes import (
 )
 from lineproof.typeset.values import grouped, unit_text
 
+_MOST_KEPT = 8192
 TypstTree = list["str | TypstTree | None"]
 
 
+@lru_cache(maxsize=_MOST_KEPT)
 def typst_tree(math: Math) -> TypstTree:
-    """Return the node as nested lists, ready for JSON."""
+    """Return the node as nested lists, ready for JSON; pieces may be shared, so change none."""
     match math:
         case Row(items):
             return ["row", *map(typst_tree, items)]

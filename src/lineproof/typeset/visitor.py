@@ -8,9 +8,10 @@ from __future__ import annotations
 
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
+from functools import lru_cache
 
-from lineproof.formula.notation import Notation
-from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
+from lineproof.formula.notation import Notation, Symbol
+from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree, names_of
 from lineproof.typeset.nodes import (
     COMMA,
     MULTIPLY,
@@ -39,6 +40,8 @@ from lineproof.typeset.values import (
 )
 
 _SUM, _PRODUCT, _SIGNED, _CLOSED = 1, 2, 3, 4
+_MOST_KEPT = 8192
+"""Formulas, symbols and numbers that are kept as typeset: they stand in line after line."""
 _ANGLE_FUNCTIONS = ("sin", "cos", "tan", "cot")
 
 
@@ -63,7 +66,13 @@ Leaf = Callable[[str], Piece]
 
 def formula_math(tree: Tree, notation: Notation) -> Math:
     """Typeset a tree with its symbols."""
-    return _Visitor(lambda name: _symbol_piece(name, notation), spaced=True).visit(tree).math
+    return _with_symbols(tree, tuple(symbol_of(name, notation) for name in names_of(tree)))
+
+
+@lru_cache(maxsize=_MOST_KEPT)
+def _with_symbols(tree: Tree, symbols: tuple[Symbol, ...]) -> Math:
+    by_name = dict(zip(names_of(tree), symbols, strict=True))
+    return _Visitor(lambda name: _symbol_piece(by_name[name]), spaced=True).visit(tree).math
 
 
 def substitution_math(
@@ -74,16 +83,18 @@ def substitution_math(
 
     def leaf(name: str) -> Piece:
         text = printed_args.get(name)
-        return _symbol_piece(name, symbols) if text is None else _number_piece(text)
+        return _symbol_piece(symbol_of(name, symbols)) if text is None else _number_piece(text)
 
     return _Visitor(leaf, spaced=False).visit(tree).math
 
 
-def _symbol_piece(name: str, notation: Notation) -> Piece:
-    math = symbol_math(symbol_of(name, notation))
+@lru_cache(maxsize=_MOST_KEPT)
+def _symbol_piece(symbol: Symbol) -> Piece:
+    math = symbol_math(symbol)
     return Piece(math, raisable=not has_superscript(math))
 
 
+@lru_cache(maxsize=_MOST_KEPT)
 def _number_piece(text: str) -> Piece:
     parts = split_number(text)
     math = number_math(text)
