@@ -1,0 +1,196 @@
+"""HTML packages verified: as issued, saved by a browser, forged, reviewed, stripped."""
+
+from __future__ import annotations
+
+import re
+from html.parser import HTMLParser
+
+import pytest
+from hypothesis import HealthCheck, given, settings
+from hypothesis import strategies as st
+from tests.audit import verifying as by
+
+from lineproof.audit.verify import Outcome, Source, Verification, Where, verify
+from lineproof.errors import UserError
+
+_BODY = re.compile(r"<main>.*</main>", re.DOTALL)
+
+
+def checked(page: str, *against: Source) -> Verification:
+    return verify(page.encode(), "beam.html", against)
+
+
+def digits() -> list[int]:
+    """Return the place of every digit of the text between the cover and the record."""
+    main = _BODY.search(by.html())
+    assert main is not None
+    found = []
+    for text in re.finditer(r">([^<>]+)<", by.html()):
+        if main.start() < text.start() < main.end():
+            found += [text.start(1) + n for n, letter in enumerate(text[1]) if letter.isdigit()]
+    return found
+
+
+def test_a_page_as_issued_is_intact() -> None:
+    found = checked(by.html())
+
+    assert (found.outcome, found.alterations, found.outside) == (Outcome.INTACT, (), ())
+
+
+def test_prose_is_told_apart_and_a_notebook_proves_it() -> None:
+    issued = by.html(prose=True)
+    forged = issued.replace("7 of 9 bars", "8 of 9 bars")
+    against = Source(by.record(), by.PROSE)
+
+    assert [o.after for o in checked(issued).outside] == ["", "1.15"]
+    assert checked(forged).outcome is Outcome.INTACT
+    assert checked(issued, against).outside == ()
+    assert checked(forged, against).outcome is Outcome.ALTERED
+
+
+@settings(max_examples=60, deadline=None, suppress_health_check=[HealthCheck.too_slow])
+@given(data=st.data())
+def test_any_other_digit_anywhere_in_the_print_is_found(data: st.DataObject) -> None:
+    place = data.draw(st.sampled_from(digits()))
+    page = by.html()
+    digit = data.draw(st.sampled_from(sorted(set("0123456789") - {page[place]})))
+
+    found = checked(page[:place] + digit + page[place + 1 :])
+
+    assert found.outcome is Outcome.ALTERED
+    assert found.alterations[0].found != found.alterations[0].recorded
+
+
+def test_an_altered_number_names_its_line() -> None:
+    """The fifteenth given is l = 6 m, line 1.15."""
+    row = by.html().index('id="given/l"')
+    place = by.html().index(">6<", row) + 1
+
+    found = checked(by.html()[:place] + "7" + by.html()[place + 1 :])
+
+    assert [(a.line, a.id, a.where) for a in found.alterations] == [
+        ("1.15", "given/l", Where.PRINT)
+    ]
+    assert found.alterations[0].sentence.startswith("H1, line 1.15, given/l: the print differs")
+
+
+@pytest.mark.parametrize(
+    ("old", "new"),
+    [
+        ("</main>", '<div class="entry"><div class="result">M = 999</div></div></main>'),
+        ("</head>", "<style>.result { visibility: hidden }</style></head>"),
+        ("</body>", "<script>document.title = 'x'</script></body>"),
+        ('id="given/l"', 'id="given/l" style="display: none"'),
+        ('id="given/l"', 'id="given/l" hidden'),
+        ("<msup>", "<msub>"),
+        ("<main>", '<main><img src="http://example.org/999.png" alt="" />'),
+        ('id="given/l"', 'id="given/l" onclick="this.textContent = 9"'),
+    ],
+    ids=["row added", "style", "script", "hidden by style", "hidden", "power", "picture", "click"],
+)
+def test_what_shows_something_else_than_the_record_is_found(old: str, new: str) -> None:
+    page = (
+        by.html()
+        .replace(old, new, 1)
+        .replace("</msup>", "</msub>" if "msub" in new else "</msup>", 1)
+    )
+
+    assert page != by.html()
+    assert checked(page).outcome is Outcome.ALTERED
+
+
+def test_rows_in_another_order_are_found() -> None:
+    page = by.html()
+    first, second, third = (
+        page.index(f'<div class="entry value" id="given/{s}"') for s in ("b", "h", "c_c")
+    )
+    swapped = page[:first] + page[second:third] + page[first:second] + page[third:]
+
+    assert checked(swapped).outcome is Outcome.ALTERED
+
+
+def test_a_mark_of_the_review_beside_a_line_is_told_as_outside_the_record() -> None:
+    page = by.html().replace('id="given/l"', 'id="given/l" data-mark="✓ accepted"', 1)
+
+    found = checked(page)
+
+    assert found.outcome is Outcome.INTACT
+    assert [outside.text for outside in found.outside] == ["✓ accepted"]
+
+
+class Saved(HTMLParser):
+    """Writes a page as a browser saves it: other spaces, no slashes, whole addresses."""
+
+    def __init__(self) -> None:
+        super().__init__(convert_charrefs=False)
+        self.pieces: list[str] = ["<!-- saved from url=(0014)about:internet -->\n"]
+        self.raw = False
+
+    def handle_starttag(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
+        self.raw = tag in ("style", "script")
+        self.pieces.append(self._tag(tag, attrs))
+
+    def handle_startendtag(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
+        self.pieces.append(self._tag(tag, attrs))
+        if tag not in ("br", "meta", "input", "img"):
+            self.pieces.append(f"</{tag}>")
+
+    @staticmethod
+    def _tag(tag: str, attrs: list[tuple[str, str | None]]) -> str:
+        told = [
+            f'{name}="file:///home/x/beam.html{value}"'
+            if name == "href" and (value or "").startswith("#")
+            else f'{name}="{(value or "").replace("&", "&amp;").replace(chr(34), "&quot;")}"'
+            for name, value in attrs
+        ]
+        return f"<{' '.join([tag, *told])}>"
+
+    def handle_endtag(self, tag: str) -> None:
+        self.raw = False
+        self.pieces.append(f"</{tag}>")
+
+    def handle_data(self, data: str) -> None:
+        self.pieces.append(data if self.raw else data.replace("\n", "\n   "))
+
+    def handle_entityref(self, name: str) -> None:
+        self.pieces.append(f"&{name};")
+
+    def handle_charref(self, name: str) -> None:
+        self.pieces.append(f"&#{name};")
+
+
+def test_a_page_saved_by_a_browser_is_still_intact_and_a_forged_one_is_not() -> None:
+    saver = Saved()
+    saver.feed(by.html(prose=True))
+    page = "".join(saver.pieces)
+    place = page.index(">6<", page.index('id="given/l"')) + 1
+
+    assert page != by.html(prose=True)
+    assert checked(page).outcome is Outcome.INTACT
+    assert checked(page[:place] + "8" + page[place + 1 :]).outcome is Outcome.ALTERED
+
+
+def test_a_page_without_its_record_is_stripped_and_compared_with_one_given() -> None:
+    stripped = re.sub(
+        r'<script type="application/vnd\.lineproof\.record.*?</script>', "", by.html()
+    )
+    against = Source(by.record())
+
+    assert checked(stripped).outcome is Outcome.STRIPPED
+    assert checked(stripped, against).alterations == ()
+    assert checked(stripped, against).proofs[0].digest == by.record().digest
+    assert checked(stripped.replace(">4<", ">5<", 1), against).alterations != ()
+
+
+def test_a_page_of_others_is_not_ours() -> None:
+    assert checked("<html><body>M = 551 kN.m</body></html>").outcome is Outcome.NOT_OURS
+
+
+def test_a_record_cut_off_is_a_message() -> None:
+    with pytest.raises(UserError, match="cut short"):
+        checked(by.html()[: by.html().index('"parts"')])
+
+
+def test_text_that_is_not_utf_8_is_a_message() -> None:
+    with pytest.raises(UserError, match="neither a PDF nor UTF-8 text"):
+        verify(b"\xff\xfe\x00<", "beam.html")
