@@ -149,14 +149,17 @@ def hostile() -> Graph:
         for symbol, value in (("a", "2 mm"), ("b", "2 mm"), ("c", "0 mm"), ("p", "1e12 mm")):
             sheet.given(symbol, value)
     with sheet.part("lines", "Lines"):
+        sheet.line("q = p*(p/a)**15", unit="mm")  # 3e187
+        sheet.line("r = a*(a/p)**15", unit="mm")  # 7e-176
         sheet.line("d = sqrt(a*b - c**2)", unit="mm")
         sheet.line("e_1 = a*b/(a + c)", unit="mm")
         sheet.line("f_1 = p**3/(p*p)*(a/(b + c))**0.5", unit="mm")
         sheet.line("g_1 = cbrt(a*b*(a + c)) + min(a, b, c)", unit="mm")
+        sheet.line("i_1 = q*r/a + r*a/q + sqrt(q*r) + cbrt(q*r*b)", unit="mm")
     return Graph(sheet.close())
 
 
-@pytest.mark.parametrize("symbol", ["d", "e_1", "f_1", "g_1"])
+@pytest.mark.parametrize("symbol", ["q", "r", "d", "e_1", "f_1", "g_1", "i_1"])
 @pytest.mark.parametrize("value", [-3.0, 0.0, 1e-9, 4.0, 1e200])
 def test_hostile_numbers_are_passed_over(symbol: str, value: float) -> None:
     graph = hostile()

@@ -20,6 +20,8 @@ MOST_FOUND = 2000
 
 STRIDES = (24, 6, 1)
 """Of the sorted edits above a claim every so many are worked at first, then more between them."""
+PROBES = (-1.0, 0.0, 1e-3, 0.5, 1.0, 2.0, 10.0, 1e3)
+"""Multiples of a value that tell how far it can move a claim."""
 
 Way = Callable[[float], float]
 """The claim's value as a function of a line above; raises where there is no value."""
@@ -187,6 +189,13 @@ def worked_or_none(way: Way, value: float) -> float | None:
         return way(value)
     except FAILURES:
         return None
+
+
+def may_reach(onward: Onward, here: float, low: float, high: float) -> bool:
+    """Tell whether a line above can move the claim there at all: most of them move it little."""
+    reached = [worked_or_none(onward.quick, here * times) for times in PROBES]
+    known = [value for value in reached if value is not None]
+    return len(known) < len(PROBES) or (min(known) <= high and max(known) >= low)
 
 
 def fitting(way: Way, values: Sequence[float], low: float, high: float) -> list[int]:

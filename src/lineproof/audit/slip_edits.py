@@ -12,7 +12,7 @@ from lineproof.audit.graph import Node
 from lineproof.audit.slip_constants import of_constant
 from lineproof.audit.slip_digits import changed, swapped
 from lineproof.audit.slip_scope import LOADS, Pairs, Scope
-from lineproof.audit.slip_tree import OPERATIONS, Place, Places, text_of
+from lineproof.audit.slip_tree import FAILURES, OPERATIONS, Place, Places, text_of
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
 TOP = (0,)
@@ -82,20 +82,28 @@ def edits_of(line: Line) -> Iterator[Edit]:
     for at, place in enumerate(line.places.places):
         above = line.places.places[place.above].operation if place.above >= 0 else ""
         if place.operation in PRODUCT and above not in PRODUCT:
-            yield from _product(line, at)
+            yield from workable(_product(line, at))
         elif place.operation in SUM and above not in SUM:
             yield from _sum(line, at)
         match place.tree:
             case Binary("**"):
-                yield from _power(line, at, place)
+                yield from workable(_power(line, at, place))
             case Call():
-                yield from _call(line, at, place)
+                yield from workable(_call(line, at, place))
             case Negative():
                 value, half = line.pair(place.below[0])
                 yield Edit("sign", (at,), value, half, partial(_sign, line, place.below[0]), 0.0)
             case Number(text):
                 yield from _number(line, at, text)
     yield from _service(line)
+
+
+def workable(edits: Iterator[Edit]) -> Iterator[Edit]:
+    """Give edits up to one that leaves the range of numbers or divides by nothing."""
+    try:
+        yield from edits
+    except FAILURES:
+        return
 
 
 def _chain(places: tuple[Place, ...], at: int, ways: tuple[str, str]) -> list[tuple[int, int]]:

@@ -28,11 +28,16 @@ LARGEST_STRAIN = 0.05
 def others_for(line: Line, target: str, name: str = "") -> Iterator[Other]:
     """Give the values that may stand by a slip where ``target`` belongs."""
     yield from other_quantities(line, target, name)
+    yield from others_by_kind(line, target, name)
+    yield from _units(line, target, name)
+    yield from _digits(line, target, name)
+
+
+def others_by_kind(line: Line, target: str, name: str = "") -> Iterator[Other]:
+    """Give the values that the kind of a quantity suggests: bars, rows of tables, load factors."""
     yield from _bars(line, target, name)
     yield from _tables(line, target, name)
     yield from _loads(line, target, name)
-    yield from _units(line, target, name)
-    yield from _digits(line, target, name)
 
 
 def _bars(line: Line, target: str, name: str) -> Iterator[Other]:

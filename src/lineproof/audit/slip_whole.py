@@ -8,35 +8,32 @@ from functools import partial
 
 from lineproof.audit.data import Claim, read_from
 from lineproof.audit.slip_digits import changed, swapped, written
-from lineproof.audit.slip_edits import TOP, Edit, Line, words_of
+from lineproof.audit.slip_edits import TOP, Edit, Line, words_of, workable
 from lineproof.audit.slip_quantities import shown
 from lineproof.audit.slip_scope import LOADS, is_next
 from lineproof.audit.slip_units import ways_of_units
-from lineproof.audit.slip_values import others_for
+from lineproof.audit.slip_values import others_by_kind
 from lineproof.errors import UserError
 from lineproof.quantity.units import internal_factor
 
+FAR_ROW = 1.0
+"""A row of a place that is not next to this one is less likely copied by so much."""
 BY_ONE = 1.0
 """A last digit that is one off was hardly mistyped."""
 OF_MOMENT = (8, 12, 10, 11, 14, 16, 9, 24, 2, 4)
 """Divisors of w l^2: simple span first, then fixed ends, coefficients of 9.3.3, cantilever."""
 OF_SHEAR = ((0.5, "/2"), (0.575, "*1.15/2"), (0.625, "*5/8"), (0.375, "*3/8"))
-OWN = frozenset((
-    "tributary", "edition", "table row", "grade", "bar size", "diameter", "bar count", "legs",
-    "service", "factored",
-))  # fmt: skip
-"""Families of :func:`others_for` that also serve for the result itself."""
 
 
 def edits_of_result(line: Line) -> Iterator[Edit]:
     """Give the slips that replace the whole result of a line."""
     yield from _rows(line)
-    yield from _moments(line)
-    for other in others_for(line, line.node.id):
-        if other.family in OWN and not (other.family == "factored" and not line.node.is_computed):
+    yield from workable(_moments(line))
+    for other in others_by_kind(line, line.node.id):
+        if other.family != "centreline" and (other.family != "factored" or line.node.is_computed):
             family = "result factored" if other.family == "factored" else other.family
             yield Edit(family, TOP, other.value, other.half, other.words, other.far)
-    yield from _factored(line)
+    yield from workable(_factored(line))
 
 
 def edits_of_copy(line: Line, claim: Claim) -> Iterator[Edit]:
@@ -58,20 +55,16 @@ def _rows(line: Line) -> Iterator[Edit]:
     """Give the results of other rows: of the same symbol elsewhere, of lines next to this one."""
     scope, node = line.scope, line.node
     unit = scope.units[node.id]
-    for other in scope.by_symbol[node.symbol]:
-        if other != node.id:
-            family = "mirror" if is_next(node.part, scope.graph[other].part) else "place"
-            yield _row(line, f"row of another place {family}", other)
-    for other in scope.near(node.part, unit):
-        if other != node.id and scope.graph[other].part == node.part:
-            yield _row(line, "row", other)
-
-
-def _row(line: Line, family: str, other: str) -> Edit:
-    far = 1.0 if family.endswith("place place") else 0.0
-    words = partial(_copied, line, other)
-    own = "row of another place" if family != "row" else "row"
-    return Edit(own, TOP, *line.pairs[other], words, far)
+    far = {i: not is_next(node.part, scope.graph[i].part) for i in scope.by_symbol[node.symbol]}
+    rows = [("row of another place", other) for other in sorted(far, key=far.__getitem__)]
+    rows += [("row", i) for i in scope.near(node.part, unit) if scope.graph[i].part == node.part]
+    values = {line.pair(0)[0]}
+    for family, other in rows:
+        value, half = line.pairs[other]
+        if value not in values:
+            values.add(value)
+            words = partial(_copied, line, other)
+            yield Edit(family, TOP, value, half, words, FAR_ROW if far.get(other) else 0.0)
 
 
 def _copied(line: Line, other: str) -> str:

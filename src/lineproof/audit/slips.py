@@ -9,7 +9,7 @@ from dataclasses import dataclass, field
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slip_bindings import edits_of_arguments, edits_of_bindings
-from lineproof.audit.slip_carry import Carrier, Onward, fitting, reach_of
+from lineproof.audit.slip_carry import Carrier, Onward, fitting, may_reach, reach_of
 from lineproof.audit.slip_edits import TOP, Edit, Line, edits_of, words_of
 from lineproof.audit.slip_rank import Fit, ranked, shares
 from lineproof.audit.slip_scope import Pairs, Scope, scope_of
@@ -20,8 +20,9 @@ from lineproof.errors import UserError
 
 FARTHER = 0.25
 """By so much (natural logarithm) a slip is less likely for each line it lies further up."""
-LOOSE = 3.0
-"""At first fits are sought so many widths wide; then the width of each is worked out."""
+LOOSE, ROUNDED = 1.5, 0.006
+"""At first fits are sought so many widths wide, and for the width that another value of three
+digits brings; then the width of each is worked out."""
 Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
 """What :func:`find_slips` is: graph, line, values used, claim, claimed ids; gives the slips."""
 MOST_KEPT = 400
@@ -95,7 +96,7 @@ class Target:
         """Between these values fits are sought at first."""
         wanted = self.claim.stands_for
         size = max(abs(wanted.low), abs(wanted.high))
-        room = LOOSE * self.relative * size + (0.01 * size if self.relative else 0.0) + 1e-9 * size
+        room = (LOOSE * self.relative + (ROUNDED if self.relative else 0.0) + 1e-9) * size
         return wanted.low - room, wanted.high + room
 
 
@@ -131,7 +132,9 @@ class SlipSearch:
         reach = reach_of(self._scope, entry_id, claimed)
         for above, distance in (*reach.lines.items(), *reach.leaves.items()):
             onward = self._carrier.onward(reach, above)
-            tried = self._tried(above) if onward is not None else None
+            if onward is None or not may_reach(onward, self._pairs[above][0], *target.room):
+                continue
+            tried = self._tried(above)
             if tried is None:
                 continue
             where = ", wherever it is used"
@@ -207,10 +210,13 @@ def _own(line: Line, claim: Claim) -> Tried:
 
 
 def _inside(line: Line) -> list[Edit]:
-    """Return the edits of a line's formula and arguments; a given has none."""
+    """Return the edits of a line's formula and arguments; a given has none.
+
+    The arguments of a found value are tried in the claimed line only: each costs a run.
+    """
     if line.node.tree is not None:
         return [*edits_of(line), *edits_of_bindings(line)]
-    return list(edits_of_arguments(line)) if line.node.is_computed else []
+    return list(edits_of_arguments(line)) if line.node.is_computed and not line.above else []
 
 
 def _above(line: Line) -> Tried:
@@ -258,9 +264,8 @@ def _worked(
     try:
         value, half = line.places.with_places(dict.fromkeys(edit.at, (edit.value, edit.half)))
         if onward is not None:
-            ends = [onward.exact(value - half), onward.exact(value + half)] if half else []
-            value = onward.exact(value)
-            half = max((abs(end - value) for end in ends), default=0.0) + target.half
+            spread = onward.quick(value + half) - onward.quick(value) if half else 0.0
+            value, half = onward.exact(value), abs(spread) + target.half
     except FAILURES:
         return None
     meets = target.claim.stands_for.meets(Interval(value - half, value + half))
