@@ -14,7 +14,7 @@ from lineproof.audit.tables import Row, read_table, write_table
 from lineproof.errors import UserError
 from lineproof.record import Record
 
-from .altered import demo, edited
+from .altered import Data, demo, edited
 
 NAMES = ("edge-beam", "existing-beam", "floor-beam")
 CRITICAL, MAJOR, MINOR, OBSERVATION = Severity
@@ -260,9 +260,28 @@ def test_many_faults_are_not_all_told() -> None:
     assert raised.value.faults[-1] == "and 60 faults more"
 
 
+def test_a_schedule_changed_by_hand_is_refused_in_plain_words() -> None:
+    def change(data: Data) -> None:
+        table = next(e for p in data["parts"] for e in p["entries"] if e["id"] == "schedule/bars")
+        table["rows"] = [["B01", "20M", "four", *table["rows"][0][3:]]]
+
+    with pytest.raises(UserError, match="'Number' is 'four', no number; take the record from"):
+        drawing_blank(edited(demo("floor-beam"), change))
+
+
+def test_facts_of_another_kind_name_no_drawing() -> None:
+    def change(data: Data) -> None:
+        data["project"] = {"drawings": "S-201"}
+
+    record = edited(demo("floor-beam"), change)
+
+    (finding,) = drawing_findings(record, as_drawn(items_of(record), {}, ("S-201", "B")))
+    assert finding.what == "The calc names no drawing S-201."
+
+
 def test_a_calc_without_schedules_still_has_its_sizes() -> None:
-    def take(data: dict[str, object]) -> None:
-        data["parts"] = [p for p in data["parts"] if p["key"] != "schedule"]  # type: ignore[attr-defined]
+    def take(data: Data) -> None:
+        data["parts"] = [p for p in data["parts"] if p["key"] != "schedule"]
 
     bare: Record = edited(demo("floor-beam"), take)
 

@@ -13,8 +13,8 @@ from lineproof.audit.slip_kinds import FAMILIES
 from lineproof.audit.traps import COVERED_BY, SLIP, TRAPS, trap_findings, traps_met
 from lineproof.audit.traps_view import Trap
 
-from .altered import NAMES, changed, demo
-from .trap_cases import SECTION, SHEAR, STIRRUPS, Case
+from .altered import NAMES, changed, demo, edited
+from .trap_cases import SECTION, SHEAR, STIRRUPS, Case, project
 from .trap_cases_service import LAID, LOADS, SERVICE, WHOLE
 from .trap_sheets import SHEETS, right
 
@@ -129,3 +129,11 @@ def test_one_leg_for_two_is_told_with_the_resistance_put_right() -> None:
 
     assert strength.claimed == pytest.approx(V_f / (V_c + V_s / 2), rel=1e-9)
     assert strength.right == pytest.approx(V_f / (V_c + V_s), rel=1e-9)
+
+
+@pytest.mark.parametrize("fact", ["text", ["text"], {"date": None}, 7, None])
+def test_facts_of_another_kind_set_off_nothing(fact: object) -> None:
+    facts = dict.fromkeys(("issue", "revisions", "locations", "building", "drawings"), fact)
+    record = edited(demo("floor-beam"), project(**facts))
+
+    assert trap_findings(record) == ()

@@ -26,6 +26,7 @@ from lineproof.audit.drawing_rows import (
 )
 from lineproof.audit.effects import DRAWN, effects_of
 from lineproof.audit.graph import Graph
+from lineproof.audit.member import project_rows
 from lineproof.audit.tables import Row
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo, read_quantity
@@ -314,8 +315,7 @@ def _not_drawn(items: Iterable[Item]) -> Iterator[Finding]:
 
 def _revisions(record: Record, rows: Iterable[Drawn]) -> Iterator[Finding]:
     told = {
-        str(row.get("number", "")): str(row.get("revision", ""))
-        for row in record.data["project"].get("drawings", [])
+        row.get("number", ""): row.get("revision", "") for row in project_rows(record, "drawings")
     }
     seen: dict[str, set[str]] = {}
     for row in rows:

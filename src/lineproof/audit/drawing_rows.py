@@ -8,6 +8,8 @@ from dataclasses import dataclass, field
 from typing import Any
 
 from lineproof.audit.graph import Graph, Node
+from lineproof.errors import UserError
+from lineproof.quantity import echo
 from lineproof.record import Record
 from lineproof.record.entry import GIVEN, LOOKUP
 from lineproof.standards.a23_3.bars import BARS
@@ -32,6 +34,8 @@ STIRRUPS_ITEM, FORM_ITEM, SPACING_ITEM = "stirrups", "stirrup form", "stirrup sp
 FROM_ITEM, TO_ITEM = "zone from", "zone to"
 CUT_ITEM, LAP_ITEM, HANGER_ITEM = "cut-off", "lap length", "hanger stirrups"
 _CUT = re.compile(r"anchorage-(bottom|top)-(\d+)-(left|right)-cut-(\d+)")
+_COLUMNS = ("Mark", "Size", "For", "Span", "Stirrups", "Form")
+_NUMBER = re.compile(r"-?\d{1,9}(\.\d{1,6})?", re.ASCII)
 _SAME = 0.5
 """Lengths [mm] that differ by less are the same."""
 _WORDS = {"bottom": "span", "top": "support"}
@@ -109,15 +113,27 @@ def _plain(graph: Graph, name: str, place: str, unit: str, node: Node, more: int
 
 def _table(graph: Graph, entry_id: str) -> list[dict[str, str]]:
     entry: Mapping[str, Any] = graph.record.entries.get(entry_id, {})
-    columns = entry.get("columns", [])
-    return [dict(zip(columns, row, strict=False)) for row in entry.get("rows", [])]
+    empty = dict.fromkeys(_COLUMNS, "")
+    rows = entry.get("rows", [])
+    return [empty | dict(zip(entry["columns"], row, strict=False)) for row in rows]
+
+
+def _number(row: Mapping[str, str], column: str) -> float:
+    """Read a number of a schedule of the record; raises :class:`UserError` for anything else."""
+    text = str(row.get(column, ""))
+    if _NUMBER.fullmatch(text) is None:
+        raise UserError(
+            f"record: its schedules were changed by hand: {column!r} is {echo(text)}, no number; "
+            "take the record from a package that 'lineproof verify' calls intact"
+        )
+    return float(text)
 
 
 def _bars(graph: Graph) -> Iterator[Item]:
     rows = [row for row in _table(graph, "schedule/bars") if row.get("Size")]
     for row in rows:
-        mark, size, number = row["Mark"], row["Size"], int(row["Number"])
-        length = float(row["Cut length, mm"])
+        mark, size, number = row["Mark"], row["Size"], int(_number(row, "Number"))
+        length = _number(row, "Cut length, mm")
         area = area_of(number, size)
         if not mark.startswith("S"):
             places = _sections(graph, rows, row)
@@ -164,7 +180,7 @@ def _own_part(row: Mapping[str, str]) -> float | None:
     serves = row["For"].split("; ")
     if any("," in each or " to " in each for each in serves):
         return None
-    return area_of(int(row["Number"]), row["Size"]) / len(serves)
+    return area_of(int(_number(row, "Number")), row["Size"]) / len(serves)
 
 
 def _places(text: str) -> list[str]:
@@ -204,8 +220,8 @@ def _stirrups(graph: Graph) -> Iterator[Item]:
         span = row["Span"]
         counts[span] = counts.get(span, 0) + 1
         place = f"span {span}, zone {counts[span]}"
-        start, end = float(row["From, mm"]), float(row["To, mm"])
-        spacing, legs = float(row["Spacing, mm"]), int(row["Legs"])
+        start, end = _number(row, "From, mm"), _number(row, "To, mm")
+        spacing, legs = _number(row, "Spacing, mm"), int(_number(row, "Legs"))
         area = area_of(legs, row["Stirrups"])
         text = f"{legs} legs {row['Stirrups']}"
         yield Item(STIRRUPS_ITEM, place, "", area, text, 1, ("stirrups/A_v",), _to("stirrups/A_v"))
@@ -221,7 +237,7 @@ def _stirrups(graph: Graph) -> Iterator[Item]:
 
 def _in_clear_span(graph: Graph, row: Mapping[str, str]) -> bool:
     length = graph.stored.get(f"span-{row['Span']}/l_n", float("inf"))
-    return 0 <= float(row["From, mm"]) <= length
+    return 0 <= _number(row, "From, mm") <= length
 
 
 def _sections_in(

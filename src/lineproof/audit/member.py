@@ -82,6 +82,23 @@ class Member:
                 yield support.number, "right"
 
 
+def project_rows(record: Record, name: str) -> list[Mapping[str, str]]:
+    """Return the rows of a table of the project's facts as text; what is none is left out."""
+    project = record.data.get("project")
+    found = project.get(name, []) if isinstance(project, Mapping) else []
+    rows = found if isinstance(found, list) else [found]
+    return [
+        {str(key): "" if value is None else str(value) for key, value in row.items()}
+        for row in rows
+        if isinstance(row, Mapping)
+    ]
+
+
+def project_table(record: Record, name: str) -> Mapping[str, str]:
+    """Return a table of the project's facts as text; empty if there is none."""
+    return next(iter(project_rows(record, name)), {})
+
+
 def member_of(record: Record) -> Member:
     """Read what kind of beam a record is of."""
     kind = str(record.data.get("kind_of_member", ""))

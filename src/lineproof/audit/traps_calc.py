@@ -7,6 +7,7 @@ from collections.abc import Iterator
 
 from lineproof.audit.data import Severity
 from lineproof.audit.graph import Node
+from lineproof.audit.member import project_rows, project_table
 from lineproof.audit.traps_loads import shares_of
 from lineproof.audit.traps_view import (
     Caught,
@@ -192,18 +193,18 @@ def _typed(entry: dict[str, object]) -> bool:
 
 
 def _header(view: View) -> Iterator[Remark]:
-    project, calc = view.record.data["project"], view.record.calc_id
-    places = [row.get("calc") for row in project.get("locations", [])]
+    record, calc = view.record, view.record.calc_id
+    places = [row["calc"] for row in project_rows(record, "locations") if row.get("calc")]
     if view.member.spans and places and calc not in places:
         yield Remark(
-            f"The project tells places of {', '.join(map(str, places))}, not of {calc}",
+            f"The project tells places of {', '.join(places)}, not of {calc}",
             "Look at the header: it may be that of an older job.",
             Severity.MINOR,
             "cover",
         )
-    issue = project.get("issue", {})
-    dates = [str(row.get("date", "")) for row in project.get("revisions", [])]
-    if issue.get("date") and dates and str(issue["date"]) < max(dates):
+    issue = project_table(record, "issue")
+    dates = [row.get("date", "") for row in project_rows(record, "revisions")]
+    if issue.get("date") and dates and issue["date"] < max(dates):
         yield Remark(
             f"The issue is dated {issue['date']}, before its last revision of {max(dates)}",
             "Look at the header: it may be that of an older issue.",

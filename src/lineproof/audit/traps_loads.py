@@ -7,6 +7,7 @@ from collections.abc import Iterator
 
 from lineproof.audit.data import Severity
 from lineproof.audit.graph import Node
+from lineproof.audit.member import project_table
 from lineproof.audit.traps_view import (
     Caught,
     Remark,
@@ -155,7 +156,7 @@ def _reduction(view: View) -> Iterator[Caught]:
 
 
 def _snow(view: View) -> Iterator[Caught]:
-    importance = str(view.record.data["project"].get("building", {}).get("importance", ""))
+    importance = project_table(view.record, "building").get("importance", "")
     if importance.lower() != "low":
         return
     for node in view.values("q_S"):

@@ -96,8 +96,8 @@ def _open_stirrups(view: View) -> Iterator[Remark]:
             at = dict(zip(columns, row, strict=False))
             if at.get("Span") in spans and at.get("Form") == "open" and _within(view, at):
                 yield Remark(
-                    f"Span {at['Span']}: stirrups {at.get('Mark', '')} from {at['From, mm']} mm "
-                    "are open although torsion counts",
+                    f"Span {at['Span']}: stirrups {at.get('Mark', '')} from {at['From, mm']} mm are "
+                    "open although torsion counts",
                     "Closed stirrups with 135° hooks.",
                     clause="11.2.7",
                     ids=(str(table["id"]),),
@@ -107,7 +107,8 @@ def _open_stirrups(view: View) -> Iterator[Remark]:
 def _within(view: View, row: Mapping[str, str]) -> bool:
     """Tell whether stirrups stand in the clear span: ties around hooks lie in the support."""
     length = view.stored(view.part(f"span-{row['Span']}").get("l_n")) or float("inf")
-    return 0 <= float(row["From, mm"]) <= length
+    start = row.get("From, mm", "")
+    return start.isdigit() and float(start) <= length
 
 
 def _other_rules(view: View) -> Iterator[Caught]:
