@@ -95,9 +95,9 @@ def _open_stirrups(view: View) -> Iterator[Remark]:
         for row in table["rows"]:
             at = dict(zip(columns, row, strict=False))
             if at.get("Span") in spans and at.get("Form") == "open" and _within(view, at):
+                named = f"Span {at['Span']}: stirrups {at.get('Mark', '')}"
                 yield Remark(
-                    f"Span {at['Span']}: stirrups {at.get('Mark', '')} from {at['From, mm']} mm are "
-                    "open although torsion counts",
+                    f"{named} from {at['From, mm']} mm are open although torsion counts",
                     "Closed stirrups with 135° hooks.",
                     clause="11.2.7",
                     ids=(str(table["id"]),),
