@@ -106,7 +106,10 @@ def test_two_files_are_merged_and_the_conflict_is_told(
     assert code == 1
     told = capsys.readouterr().out
     assert told.startswith(f"{out}\n")
-    assert "2.1 Effective depth: arithmetic checked by Kei Mori, arithmetic queried by Ines Ott" in told
+    assert (
+        "2.1 Effective depth: arithmetic checked by Kei Mori, arithmetic queried by Ines Ott"
+        in told
+    )
     merged = read_review(out.read_text(encoding="utf-8"))
     assert {mark.by for mark in merged.marks} == {"Kei Mori", "Ines Ott"}
     assert len(merged.marks) == 6
