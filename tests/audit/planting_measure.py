@@ -24,6 +24,8 @@ from .planting_rows import KINDS
 FOUND = (Verdict.ORIGIN, Verdict.UNIT)
 CALM = (Verdict.AGREES, Verdict.CARRIED)
 """What may be said of a line that was honestly worked and written."""
+READINGS = (Verdict.OTHER_METHOD, Verdict.SAFE_ROUNDING, Verdict.UNSAFE_ROUNDING)
+"""What is said of a number that has a reading besides a slip."""
 FIRST = 3
 QUICK_EVERY = 3
 """Every third beam is judged by its quick table too."""
@@ -31,13 +33,18 @@ QUICK_EVERY = 3
 
 @dataclass
 class Tally:
-    """Counts by kind of slip: planted beyond rounding, origin found, slip told; what went wrong."""
+    """Counts by kind of slip: planted beyond rounding, origin found, slip told; what went wrong.
+
+    ``another_reading`` are slips whose number by chance is that of another valid method or a round
+    one near the right value: they are called that, with the reading named.
+    """
 
     planted: Counter[str] = field(default_factory=Counter)
     found: Counter[str] = field(default_factory=Counter)
     told: Counter[str] = field(default_factory=Counter)
     claims: int = 0
     untouched: int = 0
+    another_reading: list[str] = field(default_factory=list)
     missed: list[str] = field(default_factory=list)
     false: list[str] = field(default_factory=list)
     untold: list[str] = field(default_factory=list)
@@ -58,7 +65,8 @@ class Tally:
         yield (
             f"all: planted {self.planted.total()}, origin {self.found.total()}, among the first "
             f"three {self.told.total()} ({100 * self.share_told:.1f} %); {self.claims} claims, "
-            f"{self.untouched} of them on untouched lines, false origins {len(self.false)}"
+            f"{self.untouched} of them on untouched lines, false origins {len(self.false)}; "
+            f"by chance another valid way or a round number: {len(self.another_reading)}"
         )
 
 
@@ -88,6 +96,9 @@ def _count_full(tally: Tally, number: int, sheet: Sheet) -> None:
         tally.planted[slip.kind] += 1
         what = f"beam {number}, {slip.kind}: {slip.id} worked as {slip.what}: "
         judged = said[slip.id]
+        if judged.verdict in READINGS:
+            tally.another_reading.append(f"{what}{judged.note}")
+            continue
         if judged.verdict not in FOUND:
             tally.missed.append(f"{what}{judged.verdict}, {judged.note}")
             continue
@@ -125,7 +136,10 @@ def _count_quick(tally: Tally, number: int, table: Quick) -> None:
     if table.shows_at:
         tally.planted[slip.kind] += 1
         origins = [said[i] for i in table.shows_at if said[i].verdict in FOUND]
-        if not origins or any(said[i].verdict is Verdict.AGREES for i in table.shows_at):
+        ways = [i for i in table.shows_at if said[i].verdict in READINGS]
+        if ways and not origins:
+            tally.another_reading.append(f"{what}{said[ways[0]].note}")
+        elif not origins or any(said[i].verdict is Verdict.AGREES for i in table.shows_at):
             tally.missed.append(f"{what}{[(i, str(said[i].verdict)) for i in table.shows_at]}")
         if origins:
             tally.found[slip.kind] += 1
@@ -145,7 +159,7 @@ def report(full: Tally, quick: Tally, *, faults: bool = False) -> str:
     for name, tally in (("full tables", full), ("quick tables", quick)):
         lines += ["", name, *tally.lines()]
         if faults:
-            for word in ("missed", "false", "untold"):
+            for word in ("another_reading", "missed", "false", "untold"):
                 lines += [f"{word}: {line}" for line in getattr(tally, word)]
     return "\n".join(lines) + "\n"
 

@@ -246,17 +246,22 @@ def _misread(graph: Graph, node: Node, name: str) -> Planted:
 
     def misread(values: Values) -> float:
         args = graph.named(node, values)
-        args[name] = changed_digits(args[name], target.unit, f"{node.id} {name}")
+        args[name] = changed_digits(args[name], target.unit, f"{node.id} {name}", padded=False)
         return node.compute(args)
 
     says = (name, target.symbol)
     return Planted(rows.DIGIT_IN, node.id, f"digits of {name}", misread, says)
 
 
-def changed_digits(value: float, unit: str, seed: str) -> float:
-    """Return a value with two digits of its three exchanged, or one digit written otherwise."""
+def changed_digits(value: float, unit: str, seed: str, *, padded: bool = True) -> float:
+    """Return a value with two digits of its three exchanged, or one digit written otherwise.
+
+    Not ``padded``, zeros behind the point that only fill up the three digits are not written.
+    """
     draw = Random(seed)  # noqa: S311 - the same slip every time
     text = three_digits(value / internal_factor(unit))
+    if not padded and "." in text:
+        text = text.rstrip("0").rstrip(".")
     places = [i for i, c in enumerate(text) if c.isdigit()]
     first = next((k for k, i in enumerate(places) if text[i] != "0"), None)
     if first is None:
