@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from decimal import Decimal
 
 from lineproof.audit.data import Claim, Interval, Slip
-from lineproof.quantity.digits import significant
+from lineproof.quantity.digits import number_text, significant
 from lineproof.quantity.units import UNITS, internal_factor, units_of_kind
 
 _MOST_POWER = 9
@@ -20,6 +20,7 @@ _COARSE = (5, 10, 25, 50, 100)
 _COARSE_ELSEWHERE = (10,)
 _BUILT = ("length", "area")
 _EXACT_DIGITS = 6
+_LARGE = 10**6
 _FARTHEST = 0.025
 """Part of a value by which a rounding may move it; beyond it is no rounding."""
 
@@ -74,8 +75,12 @@ def coarse_rounding(claim: Claim, follows: Iterable[Interval]) -> Rounded | None
         for count in (1, *coarse):
             step = unit * count
             if number % step == 0 and away < float(step) * internal_factor(claim.unit):
-                return Rounded(of, f"{step.normalize():f}", abs(claim.value) > abs(of))
+                return Rounded(of, _plain(step), abs(claim.value) > abs(of))
     return None
+
+
+def _plain(step: Decimal) -> str:
+    return f"{step.normalize():f}" if step < _LARGE else number_text(step.normalize())
 
 
 def _is_simpler(number: Decimal, of: float, unit: str) -> bool:
