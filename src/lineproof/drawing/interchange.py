@@ -7,6 +7,7 @@ finite numbers, everything near the field of paper, sizes within limits.
 from __future__ import annotations
 
 from dataclasses import MISSING, fields
+from functools import cache
 from typing import Any
 
 from lineproof.drawing import json_values
@@ -59,14 +60,21 @@ def to_json(figure: Figure) -> dict[str, Any]:
 
 def _shape_json(shape: Shape) -> dict[str, Any]:
     data: dict[str, Any] = {"shape": _NAMES[type(shape)]}
-    for field in fields(shape):
-        value = getattr(shape, field.name)
-        if value != field.default:
-            data[field.name] = _plain(value)
+    for name, default in _defaults(type(shape)):
+        value = getattr(shape, name)
+        if value != default:
+            data[name] = _plain(value)
     return data
 
 
+@cache
+def _defaults(kind: type[Any]) -> tuple[tuple[str, Any], ...]:
+    return tuple((field.name, field.default) for field in fields(kind))
+
+
 def _plain(value: object) -> object:
+    if value.__class__ is float:  # most of them
+        return float(f"{value:.10g}") + 0.0
     if isinstance(value, (int, float)) and not isinstance(value, bool):
         return float(f"{value:.10g}") + 0.0  # no negative zero
     if isinstance(value, tuple):

@@ -10,7 +10,7 @@ from __future__ import annotations
 import difflib
 from dataclasses import dataclass
 from decimal import Decimal
-from functools import cache
+from functools import cache, lru_cache
 from typing import TYPE_CHECKING, Any
 
 from lineproof.errors import UserError
@@ -145,6 +145,7 @@ def plain_spelling(text: str) -> str:
     return _SAME_UNIT.get(tidy, tidy)
 
 
+@lru_cache(maxsize=1024)
 def unit_named(text: str) -> Unit:
     """Return the unit of the closed list, or raise :class:`UserError` with the nearest names."""
     spelling = plain_spelling(text) if len(text) <= 20 else text  # noqa: PLR2004 - longest is 7

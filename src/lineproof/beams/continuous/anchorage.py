@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from bisect import bisect_left, bisect_right
 from collections.abc import Iterable
 from dataclasses import dataclass
 from functools import lru_cache
@@ -146,10 +147,9 @@ def _general(basis: Basis, bar: Bar, s_c: float, d_bs: float, common: dict[str, 
 
 def bar_of(designed: Designed, run: BarRun) -> Bar:
     """Return what the development of a run rests on: the fullest layer, the deepest concrete."""
-    spans = [
-        k for k in range(1, len(designed.outline.lengths) + 1)
-        if run.start < designed.outline.axes[k] and run.end > designed.outline.axes[k - 1]
-    ]  # fmt: skip
+    axes = designed.outline.axes
+    first, last = bisect_right(axes, run.start), bisect_left(axes, run.end)
+    spans = list(range(max(first, 1), min(last, len(axes) - 1) + 1))
     spans = spans or [1 if run.end <= 0 else len(designed.outline.lengths)]
     h = max(designed.outline.depths[k - 1] for k in spans)
     if run.place == "overhang":

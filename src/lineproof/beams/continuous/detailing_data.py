@@ -10,6 +10,8 @@ from dataclasses import dataclass, field
 from functools import cached_property
 from typing import Literal
 
+import numpy as np
+
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.continuous.forces import Demand, Forces
@@ -150,6 +152,13 @@ class Designed:
     def sags(self) -> tuple[Demand, ...]:
         """The largest moment of every span, between the faces."""
         return tuple(self.forces.sag(k) for k in range(1, len(self.outline.lengths) + 1))
+
+    @cached_property
+    def shear_table(self) -> tuple[Floats, Floats, Floats]:
+        """Start, end and resistance of the stirrups of all stretches, as arrays."""
+        rows = [(s.start, s.end, s.V_s) for s in self.shear]
+        start, end, V_s = np.array(rows, dtype=float).reshape(-1, 3).T.copy()
+        return start, end, V_s
 
     def cantilever(self, span: int) -> bool:
         """Whether a span is a cantilever."""

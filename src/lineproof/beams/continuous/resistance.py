@@ -8,6 +8,7 @@ Compression bars are not counted.
 
 from __future__ import annotations
 
+from bisect import bisect_left, bisect_right
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
 
@@ -51,8 +52,10 @@ class Standing:
 
 def alike(a: BarRun, b: BarRun) -> bool:
     """Tell whether two runs are the same bars, one behind the other."""
-    one, other = ((r.face, r.layer, r.place, r.size, r.number) for r in (a, b))
-    return one == other
+    return (
+        a.face == b.face and a.layer == b.layer and a.place == b.place
+        and a.size == b.size and a.number == b.number
+    )  # fmt: skip
 
 
 def lapped(first: BarRun, second: BarRun) -> bool:
@@ -83,11 +86,14 @@ def lap_pairs(
 
     Every end has one mate at most: of several, the one with the longest overlap.
     """
+    order = sorted(range(len(runs)), key=lambda j: runs[j].start)
+    starts = [runs[j].start for j in order]
     found = [
-        (first.end - second.start, i, j)
+        (first.end - runs[j].start, i, j)
         for i, first in enumerate(runs)
-        for j, second in enumerate(runs)
-        if first.start < second.start < first.end < second.end and test(first, second)
+        # Of those that start inside it.
+        for j in order[bisect_right(starts, first.start) : bisect_left(starts, first.end)]
+        if first.end < runs[j].end and test(first, runs[j])
     ]
     ended: set[int] = set()
     started: set[int] = set()

@@ -92,21 +92,25 @@ class SpanDemand:
 
 def stretch_at(designed: Designed, x: float) -> ShearStretch:
     """Return the shear resistance at a place: where stretches meet, the weaker."""
-    met = [s for s in designed.shear if s.start <= x <= s.end]
+    start, end, _ = designed.shear_table
+    met = [designed.shear[n] for n in np.flatnonzero((start <= x) & (x <= end))]
     return min(met, key=lambda s: s.V_s, default=NO_SHEAR)
 
 
 def stretches_at(designed: Designed, x: Floats) -> list[ShearStretch]:
     """Return :func:`stretch_at` of many places at once."""
-    if not designed.shear:
+    if not len(x):
+        return []
+    start, end, V_s = designed.shear_table
+    near = np.flatnonzero((start <= x.max()) & (x.min() <= end))
+    if not len(near):
         return [NO_SHEAR] * len(x)
-    start, end, V_s = np.array([(s.start, s.end, s.V_s) for s in designed.shear]).T
-    met = (start <= x[:, None]) & (x[:, None] <= end)
-    weakest = np.where(met, V_s, np.inf).argmin(axis=1)
+    met = (start[near] <= x[:, None]) & (x[:, None] <= end[near])
+    weakest = np.where(met, V_s[near], np.inf).argmin(axis=1)
     found = met[np.arange(len(x)), weakest]
     return [
         designed.shear[n] if there else NO_SHEAR
-        for n, there in zip(weakest.tolist(), found.tolist(), strict=True)
+        for n, there in zip(near[weakest].tolist(), found.tolist(), strict=True)
     ]
 
 
@@ -136,11 +140,17 @@ def stations(designed: Designed, span: int, count: int) -> Floats:
     even = np.clip(np.round(np.linspace(start, end, count)), start, end)
     axis = designed.outline.axes[span - 1]
     jumps = [float(b) for b in designed.forces.solved.solution.span(span).breaks]
-    jumps += [x - axis for s in designed.shear for x in (s.start, s.end)]
+    jumps += _inside(np.concatenate(designed.shear_table[:2]) - axis, start - 2.0, end + 2.0)
     near = [b + step for b in jumps for step in (-1.0, 0.0, 1.0)]
     extra = [x for x in (left, right, *near) if start <= x <= end]
     made: Floats = np.unique(np.concatenate([even, extra]))
     return made
+
+
+def _inside(x: Floats, start: float, end: float) -> list[float]:
+    """Return the places that lie from start to end."""
+    found: list[float] = x[(start <= x) & (x <= end)].tolist()
+    return found
 
 
 def demand_of(designed: Designed, span: int, count: int) -> SpanDemand:
