@@ -143,6 +143,22 @@ def test_stale_marks_are_listed_under_what_has_changed(calc: Record) -> None:
     assert "3 marked before a change" in text
 
 
+def test_many_changes_make_no_endless_list(calc: Record) -> None:
+    """Every input changed: the changes that touch most lines stand alone, the rest together."""
+    review = marked(
+        Review("B7", (Reviewer("Kei Mori", "KM"),)), calc, all_lines(calc), by="Kei Mori", at=AT
+    )
+    data = copy.deepcopy(calc.data)
+    for part in data["parts"]:
+        for entry in part["entries"]:
+            entry["digest"] = "0" * 16
+    printed = printed_review(review, Record(data | {"digest": "1" * 16}))
+    assert len(printed.stale) == 26
+    assert printed.stale[-1].why == "Other changes, several to a line."
+    told = {line for stale in printed.stale for line, _ in stale.lines}
+    assert told == set(all_lines(calc))
+
+
 def test_a_sign_off_is_printed_with_the_digest_and_stands_on_the_cover(calc: Record) -> None:
     review = marked(
         Review("B7", (Reviewer("Kei Mori", "KM"),)), calc, all_lines(calc), by="Kei Mori", at=AT

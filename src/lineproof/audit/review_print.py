@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from itertools import groupby
 
 from lineproof.audit.review import Mark, Raised, Review, Said, SignOff, State, in_order
 from lineproof.audit.review_marks import Stale, Standing, standing
@@ -19,6 +18,8 @@ from lineproof.record import Record
 
 MOST_LINES = 60
 """Lines that a change has made stale are named up to here; of more only the number is told."""
+MOST_CHANGES = 25
+"""Changes listed one by one, those that touch the most lines."""
 _DAY = 10
 """Characters of a day: of a time only the day is printed."""
 
@@ -108,22 +109,31 @@ class _Words:
         )
 
     def stale(self) -> Iterable[PrintedStale]:
-        """Give what has changed, each with the lines marked before it."""
-        found = sorted(self.stands.stale_marks, key=lambda each: each.why)
-        for why, group in groupby(found, key=lambda each: each.why):
-            marks = list(group)
-            ids = list(dict.fromkeys(each.mark.line for each in marks))
-            by = sorted({self.review.initials(each.mark.by) for each in marks})
-            more = f" and {len(ids) - MOST_LINES} more" if len(ids) > MOST_LINES else ""
-            yield PrintedStale(
-                self.labelled(why, marks[0]),
-                f"{len(marks)} mark{'' if len(marks) == 1 else 's'} by {', '.join(by)}",
-                self.lines(ids[:MOST_LINES]),
-                more,
-            )
+        """Give what has changed, each with the lines marked before it, the most lines first."""
+        groups: dict[str, list[Stale]] = {}
+        for each in self.stands.stale_marks:
+            groups.setdefault(self.labelled(each), []).append(each)
+        ordered = sorted(groups.items(), key=lambda item: (-len(item[1]), item[0]))
+        yield from (self.changed(why, marks) for why, marks in ordered[:MOST_CHANGES])
+        rest = [each for _, marks in ordered[MOST_CHANGES:] for each in marks]
+        if rest:
+            yield self.changed("Other changes, several to a line.", rest)
 
-    def labelled(self, why: str, stale: Stale) -> str:
+    def changed(self, why: str, stale: Iterable[Stale]) -> PrintedStale:
+        """Word a change and the marks that are older than it."""
+        marks = [each.mark for each in stale]
+        ids = list(dict.fromkeys(mark.line for mark in marks))
+        by = sorted({self.review.initials(mark.by) for mark in marks})
+        return PrintedStale(
+            why,
+            f"{len(marks)} mark{'' if len(marks) == 1 else 's'} by {', '.join(by)}",
+            self.lines(ids[:MOST_LINES]),
+            f" and {len(ids) - MOST_LINES} more" if len(ids) > MOST_LINES else "",
+        )
+
+    def labelled(self, stale: Stale) -> str:
         """Say what has changed with the labels of its lines, where there are few of them."""
+        why = stale.why
         if stale.gone or not 0 < len(stale.causes) <= MOST_LINES // 10:
             return f"{why[:1].upper()}{why[1:]}."
         entries = self.record.entries
