@@ -24,11 +24,14 @@ from lineproof.quantity.units import UNITS, internal_factor, plain_spelling, uni
 from lineproof.record.entry import GIVEN, LOOKUP
 from lineproof.standards.catalogue import NOTATION
 
-MOST = 120
-"""Assignments of a notebook that are compared with the catalogue."""
+MOST = 60
+"""Formulas of a notebook that are compared with the catalogue."""
+MOST_TYPED = 300
+"""Numbers typed in code that are compared with the record."""
 _TURN = 2 * math.pi
 _OWN = Severity.OBSERVATION
 _SAME = 5e-4
+_NEAR = 6e-3
 _WORD = re.compile(r"[A-Za-z0-9/.·²³⁴^*]+")
 _HIDDEN_STRESS = frozenset(["kPa", "Pa", "GPa", "psi", "ksi", "psf", "ksf"])
 
@@ -75,7 +78,7 @@ def code_findings(codes: Sequence[Code], scope: Scope | None) -> Iterator[Findin
     """Give what is wrong with plain Python arithmetic, against the catalogue and the record."""
     units = units_of(scope.record) if scope is not None else {}
     find = partial(_stands, scope)
-    compared = 0
+    compared = typed = 0
     for made, values in in_order(codes):
         if PARAMETERS in made.cell.tags or made.tree is None:
             continue
@@ -86,21 +89,22 @@ def code_findings(codes: Sequence[Code], scope: Scope | None) -> Iterator[Findin
                 # A letter may be anything in code: only what is like the formula is meant by it.
                 yield from (f for f in held if len(made.name) > 1 or f.severity is not _OWN)
             yield from _power_of_ten(made, values, find)
-        else:
+        elif _means_something(made, scope) and (typed := typed + 1) <= MOST_TYPED:
             yield from _typed(made, scope)
     for code, values in cell_by_cell(codes):
         yield from _radians(code, values)
-    if compared > MOST:
+    if compared > MOST or typed > MOST_TYPED:
         yield finding(
-            Severity.OBSERVATION, f"more than {MOST} formulas in code; the rest is not compared"
+            Severity.OBSERVATION,
+            f"more than {MOST} formulas or {MOST_TYPED} typed numbers in code; the rest is not "
+            "compared",
         )
 
 
 def recorded_findings(codes: Sequence[Code]) -> Iterator[Finding]:
     """Give what is wrong with the formulas that code records, where there is no record of them."""
-    for made in (made for code in codes for made in recorded(code)):
-        if made.method != "line" or "=" not in made.texts[0]:
-            continue
+    lines = [m for code in codes for m in recorded(code) if m.method == "line"]
+    for made in [m for m in lines if "=" in m.texts[0]][:MOST]:
         try:
             symbol, tree = parse_line(made.texts[0])
         except UserError as error:
@@ -112,6 +116,10 @@ def recorded_findings(codes: Sequence[Code]) -> Iterator[Finding]:
 
 def _stands(scope: Scope | None, name: str) -> Node | None:
     return scope.find(name, "") if scope is not None else None
+
+
+def _means_something(made: Assigned, scope: Scope | None) -> bool:
+    return made.symbol in RESULTS or (scope is not None and made.symbol in scope.by_symbol)
 
 
 def _hand(made: Assigned) -> Hand:
@@ -231,9 +239,9 @@ def _unit_met(value: float, node: Node) -> str | None:
 
 def _same(typed: float, value: float) -> bool:
     """Tell whether a typed number is a value rounded to its digits, three at least."""
-    digits = max(len(f"{typed:.10g}".lstrip("-0.").replace(".", "").rstrip("0")), 3)
-    if not math.isfinite(value) or not math.isfinite(typed):
+    if not math.isclose(typed, value, rel_tol=_NEAR):
         return False
+    digits = max(len(f"{typed:.10g}".lstrip("-0.").replace(".", "").rstrip("0")), 3)
     return math.isclose(typed, float(significant(value, digits)), rel_tol=1e-9, abs_tol=1e-12)
 
 

@@ -19,7 +19,7 @@ from lineproof.record.entry import CRITERIA, LINE
 from lineproof.standards.catalogue import criteria
 from lineproof.standards.references import MECHANICS
 
-MOST = 120
+MOST = 60
 """Different formulas of a record that are compared; no hand calculation has more."""
 _TEN = re.compile(r"10{3,9}(\.0*)?\Z|1(\.0*)?[eE]\+?0?[3-9]\Z|0\.0{2,8}1\Z|1(\.0*)?[eE]-0?[3-9]\Z")
 _TURN = ("3.14", "57.29", "57.3", "0.01745", "0.0175", "180")

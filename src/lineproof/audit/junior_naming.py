@@ -19,7 +19,7 @@ from lineproof.formula.tree import numbers_of, walk
 from lineproof.quantity.units import UNITS
 from lineproof.standards.catalogue import NOTATION
 
-MOST_TRIALS = 300
+MOST_TRIALS = 200
 """Trials of edits for one pair of formulas, so that a long formula takes no longer than that."""
 PLAINEST = 12
 """Cost of a difference in one thing: nothing plainer is looked for."""
@@ -58,11 +58,12 @@ def named_difference(hand: Tree, theirs: Tree, units: Mapping[str, str]) -> Name
     points = points_for({*names_of(hand), *names_of(theirs)}, units)
     missing = tuple(n for n in names_of(theirs) if n not in names_of(hand))
     best: Named | None = None
-    left = MOST_TRIALS
+    left, written = MOST_TRIALS, sampled(hand, points)
     for form in (theirs, *_like(branches(theirs), hand)):
         share = MOST_TRIALS if form is theirs else min(MOST_TRIALS // 4, left)
         for edit in islice(_edits(hand, form, units), share):
-            told = _told(edit, points, limited=form is not theirs)
+            mine = written if edit.mine is hand else sampled(edit.mine, points)
+            told = _told(edit, mine, sampled(edit.theirs, points), limited=form is not theirs)
             if told is not None and (best is None or told.cost < best.cost):
                 best = told
         if form is not theirs:
@@ -83,8 +84,8 @@ def _limits(tree: Tree) -> int:
     return sum(isinstance(n, Call) and n.function in ("min", "max") for n in walk(tree))
 
 
-def _told(edit: _Edit, points: Mapping[str, Values], *, limited: bool) -> Named | None:
-    factor = constant_ratio(sampled(edit.mine, points), sampled(edit.theirs, points))
+def _told(edit: _Edit, mine: Values, theirs: Values, *, limited: bool) -> Named | None:
+    factor = constant_ratio(mine, theirs)
     if factor is None:
         return None
     words, cost = edit.words, edit.cost + (_LIMIT if limited else 0)

@@ -24,6 +24,7 @@ POINTS = 24
 ENOUGH = 8
 """Points at which both must have a value, for a comparison to say anything."""
 _SAME = 1e-9
+_APART = 1e-6
 _LARGEST_POWER = 50.0
 _RANGES = {
     "f_c": (20, 80), "f_y": (300, 500), "phi_c": (0.5, 0.9), "phi_s": (0.6, 0.95),
@@ -131,6 +132,10 @@ def constant_ratio(first: Values, second: Values) -> float | None:
     >>> constant_ratio(np.arange(1.0, 25.0) * 3, np.arange(1.0, 25.0))
     3.0
     """
+    # Two points tell nearly every pair apart, at a tenth of the cost of all.
+    crossed, other = float(first[0] * second[1]), float(first[1] * second[0])
+    if abs(crossed - other) > _APART * max(abs(crossed), abs(other)):
+        return None
     held = np.isfinite(first) & np.isfinite(second)
     if np.count_nonzero(held) >= ENOUGH and np.array_equal(first[held], second[held]):
         return 1.0  # also where both are zero, so that there is no ratio

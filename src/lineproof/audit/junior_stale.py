@@ -29,6 +29,7 @@ INPUTS = {
 _SHOWN = re.compile(r"\b([A-Za-z][A-Za-z0-9_]{0,39})\s*=\s*(-?\d{1,12}(?:\.\d{1,12})?)(?![\d.eE])")
 _MOST_SHOWN = 200
 _LONGEST_OUTPUT = 20_000
+_LONGEST_OUTPUTS = 1_000_000
 
 
 def stale(
@@ -141,8 +142,10 @@ def _shows(code: Code) -> bool:
 
 def _printed(codes: Sequence[Code]) -> Iterator[Finding]:
     """Compare numbers that a cell printed with what its code gives as it stands."""
+    left = _LONGEST_OUTPUTS
     for code, values in cell_by_cell(codes):
-        text = "\n".join(output[:_LONGEST_OUTPUT] for output in code.cell.outputs)
+        text = "\n".join(output[:_LONGEST_OUTPUT] for output in code.cell.outputs)[:left]
+        left -= len(text)
         for name, number in _SHOWN.findall(text)[:_MOST_SHOWN]:
             value = values.get(symbol_of(name))
             if value is not None and not _agrees(number, value):
