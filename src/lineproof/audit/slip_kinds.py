@@ -65,7 +65,8 @@ FAMILIES: dict[str, Family] = {
     "mirror": Family("left for right, or neighbouring place", 1.2),
     "place": Family("value of another place", 0.4),
     "row": Family("neighbouring row copied", 0.8),
-    "row of another place": Family("value of another place", 0.8),
+    "next row": Family("left for right, or neighbouring place", 0.8),
+    "row of another place": Family("value of another place", 0.4),
     # units and writing
     "unit": Family("unit factor", 1.0),
     "result unit": Family("unit factor", 0.8),
@@ -75,6 +76,6 @@ FAMILIES: dict[str, Family] = {
     "mistyped": Family("mistyped digit", 0.6),
     "mistyped argument": Family("mistyped digit", 0.15),
     "swapped result": Family("transposed digits", 0.4),
-    "mistyped result": Family("mistyped digit", 0.3),
+    "mistyped result": Family("mistyped digit", 0.2),
 }
 """Every family by its key. The shares are a checker's judgement, not counted from a survey."""

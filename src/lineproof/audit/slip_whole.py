@@ -16,8 +16,6 @@ from lineproof.audit.slip_values import others_by_kind
 from lineproof.errors import UserError
 from lineproof.quantity.units import internal_factor
 
-FAR_ROW = 1.0
-"""A row of a place that is not next to this one is less likely copied by so much."""
 BY_ONE = 1.0
 """A last digit that is one off was hardly mistyped."""
 OF_MOMENT = (8, 12, 10, 11, 14, 16, 9, 24, 2, 4)
@@ -55,16 +53,17 @@ def _rows(line: Line) -> Iterator[Edit]:
     """Give the results of other rows: of the same symbol elsewhere, of lines next to this one."""
     scope, node = line.scope, line.node
     unit = scope.units[node.id]
-    far = {i: not is_next(node.part, scope.graph[i].part) for i in scope.by_symbol[node.symbol]}
-    rows = [("row of another place", other) for other in sorted(far, key=far.__getitem__)]
+    same = scope.by_symbol[node.symbol]
+    rows = [("next row", i) for i in same if is_next(node.part, scope.graph[i].part)]
     rows += [("row", i) for i in scope.near(node.part, unit) if scope.graph[i].part == node.part]
+    rows += [("row of another place", i) for i in same]
     values = {line.pair(0)[0]}
     for family, other in rows:
         value, half = line.pairs[other]
         if value not in values:
             values.add(value)
             words = partial(_copied, line, other)
-            yield Edit(family, TOP, value, half, words, FAR_ROW if far.get(other) else 0.0)
+            yield Edit(family, TOP, value, half, words)
 
 
 def _copied(line: Line, other: str) -> str:
@@ -149,7 +148,7 @@ def _factored(line: Line) -> Iterator[Edit]:
 
 
 def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
-    """Give the numbers that the claim may be a slip of the pen for, if they follow here."""
+    """Give the number that the claim may be a slip of the pen for, if it follows here."""
     number = written(claim.typed)
     value, half = line.pair(0)
     try:
@@ -159,17 +158,17 @@ def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
     if not number or not value:
         return
     for family, ways in (("swapped result", swapped), ("mistyped result", changed)):
+        near = []
         for meant in ways(number):
-            try:
-                interval = read_from(meant).times(factor)
-            except ArithmeticError:
-                continue
+            interval = read_from(meant).times(factor)
             if interval.low - half <= value <= interval.high + half:
-                words = partial("the result {} written as {}".format, meant, number)
-                last = _by_one_in_the_last(meant, number)
-                # What the claim would be if the line's own value had met the same slip.
-                off = value - interval.middle
-                yield Edit(family, TOP, claim.value + off, half, words, BY_ONE if last else 0.0)
+                near.append((abs(value - interval.middle), meant, value - interval.middle))
+        if near:
+            _, meant, off = min(near)
+            words = partial("the result {} written as {}".format, meant, number)
+            far = BY_ONE if _by_one_in_the_last(meant, number) else 0.0
+            # What the claim would be if the line's own value had met the same slip.
+            yield Edit(family, TOP, claim.value + off, half, words, far)
 
 
 def _by_one_in_the_last(first: str, second: str) -> bool:
