@@ -6,6 +6,7 @@ finite numbers, everything near the field of paper, sizes within limits.
 
 from __future__ import annotations
 
+from collections.abc import Hashable
 from dataclasses import MISSING, fields
 from functools import cache
 from typing import Any
@@ -60,7 +61,8 @@ def to_json(figure: Figure) -> dict[str, Any]:
 
 def _shape_json(shape: Shape) -> dict[str, Any]:
     data: dict[str, Any] = {"shape": _NAMES[type(shape)]}
-    for name, default in _defaults(type(shape)):
+    kind: Hashable = type(shape)
+    for name, default in _defaults(kind):
         value = getattr(shape, name)
         if value != default:
             data[name] = _plain(value)
@@ -68,7 +70,7 @@ def _shape_json(shape: Shape) -> dict[str, Any]:
 
 
 @cache
-def _defaults(kind: type[Any]) -> tuple[tuple[str, Any], ...]:
+def _defaults(kind: Any) -> tuple[tuple[str, Any], ...]:
     return tuple((field.name, field.default) for field in fields(kind))
 
 

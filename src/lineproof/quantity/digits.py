@@ -24,7 +24,7 @@ MOST_DIGITS = 6
 ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
-MOST_KEPT = 4096
+MOST_KEPT = 16384
 """Rounded numbers that are kept: the lines of a beam use the same ones again and again."""
 _EXACT = Context(prec=400, rounding=ROUND_HALF_UP)
 

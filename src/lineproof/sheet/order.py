@@ -66,6 +66,8 @@ def out_of_date(parts: Mapping[str, Part], expected: Mapping[str, str]) -> list[
 
     def is_old(entry: Entry) -> bool:
         """Tell whether an entry was replaced by a different one, or rests on such a one."""
+        if id(entry) in known:
+            return known[id(entry)]
         waiting = [entry]
         while waiting:  # not by recursion: a calculation may be one long chain
             top = waiting[-1]
