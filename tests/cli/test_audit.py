@@ -16,8 +16,8 @@ from tests.audit.hand import beam as hand_beam
 from tests.beams import gallery
 
 from lineproof.cli import main
-from lineproof.cli.audit import picked
 from lineproof.errors import UserError
+from lineproof.notebook.audited import picked
 
 Capture = pytest.CaptureFixture[str]
 Notebook = dict[str, Any]

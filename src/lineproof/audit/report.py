@@ -109,8 +109,10 @@ def report_record(audit: Audit, record: Record, *, checker: str = "", date: str 
         str(calc["title"]),
         project=_project(record.data, checker, date),
     )
-    sheet.codes, sheet.member = dict(record.data["codes"]), _MEMBER
-    _Report(sheet, audit, Graph(record)).write()
+    report = Report(sheet, audit, Graph(record))
+    report.compared()
+    report.findings()
+    report.judged()
     return sheet.close()
 
 
@@ -126,17 +128,17 @@ def _project(data: Mapping[str, Any], checker: str, date: str) -> dict[str, Any]
     return facts | {"issue": {name: text for name, text in issue.items() if text}}
 
 
-class _Report:
+class Report:
     """Writes an audit onto a sheet, a part at a time."""
 
     def __init__(self, sheet: Sheet, audit: Audit, graph: Graph) -> None:
         self.sheet, self.audit, self.graph = sheet, audit, graph
+        sheet.codes, sheet.member = dict(graph.record.data["codes"]), _MEMBER
         self.slips = {judged.id: judged.slips for judged in audit.judged}
         self.titles = {part["key"]: part["title"] for part in graph.record.parts}
 
-    def write(self) -> None:
-        """Write all parts."""
-        self._compared()
+    def findings(self) -> None:
+        """Record the findings by severity, numbered, each with its effects."""
         number = 0
         for severity in Severity:
             group = [f for f in self.audit.findings if f.severity is severity]
@@ -149,12 +151,11 @@ class _Report:
         if not number:
             with self.sheet.part("findings", "Findings"):
                 self.sheet.note("none", "Nothing was found.")
-        if self.audit.judged:
-            self._judged()
 
     # -- what was compared ---------------------------------------------------------------------
 
-    def _compared(self) -> None:
+    def compared(self) -> None:
+        """Record what was compared, how, and the counts of findings and verdicts."""
         sheet, audit, graph = self.sheet, self.audit, self.graph
         with sheet.part("compared", "What was compared"):
             title = graph.record.data["calc"]["title"]
@@ -231,7 +232,8 @@ class _Report:
 
     # -- judged lines ------------------------------------------------------------------------------
 
-    def _judged(self) -> None:
+    def judged(self) -> None:
+        """Record every claim beside what follows and what is right, and what was not claimed."""
         claimed = [judged for judged in self.audit.judged if judged.claim is not None]
         if claimed:
             with self.sheet.part("judged", "Lines judged"):

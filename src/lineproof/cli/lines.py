@@ -5,17 +5,15 @@ from __future__ import annotations
 import argparse
 import json
 import sys
-from collections.abc import Callable, Iterable, Mapping
-from pathlib import Path
+from collections.abc import Iterable, Mapping
 from typing import Any
 
-from lineproof.errors import UserError
 from lineproof.formula import parse_criterion
+from lineproof.notebook.records import altered_lines, read_records
 from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, VALUES
 from lineproof.typeset import printable
 
-LARGEST_FILE = 64_000_000
 MOST_NAMED = 20
 _COMMON = ("id", "label", "kind", "symbol", "title", "clause", "basis")
 _OWN = ("typed", "source", "table", "row", "numbers", "procedure", "settings", "closing", "holds",
@@ -37,70 +35,6 @@ def run(options: argparse.Namespace) -> int:
     if len(altered) > MOST_NAMED:
         sys.stderr.write(f"and {len(altered) - MOST_NAMED} more\n")
     return 1 if altered else 0
-
-
-def altered_lines(record: Record) -> list[str]:
-    """Return a sentence per line that its own formula and givens do not give.
-
-    A record says what it was computed from, so one that was changed by hand gives itself away.
-    """
-    # Importing them registers the procedures by which found values are found again.
-    import lineproof.beams  # noqa: PLC0415 - to recompute only
-    import lineproof.standards.catalogue  # noqa: F401, PLC0415 - 0.1 s, to recompute only
-    from lineproof.record import recompute  # noqa: PLC0415 - with it
-
-    return [str(difference) for difference in recompute(record)]
-
-
-def read_records(path: Path) -> list[Record]:
-    """Read the records of a file by its kind; raises :class:`UserError` that names the file."""
-    readers: dict[str, Callable[[Path], list[Record]]] = {
-        ".ipynb": _from_notebook, ".pdf": _from_pdf, ".html": _from_html, ".json": _from_json,
-    }  # fmt: skip
-    reader = readers.get(path.suffix.lower())
-    if reader is None:
-        raise UserError(f"{path}: not a file with lines; give one of {', '.join(readers)}")
-    try:
-        return reader(path)
-    except OSError as error:
-        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
-    except UnicodeDecodeError:
-        raise UserError(f"{path}: not UTF-8 text; give a file that lineproof has made") from None
-    except UserError as error:
-        named = [f if str(path) in f else f"{path}: {f}" for f in error.faults]
-        raise UserError(named) from None
-
-
-def _from_notebook(path: Path) -> list[Record]:
-    from lineproof.notebook.cells import cells_of, load_notebook  # noqa: PLC0415 - by kind of file
-    from lineproof.notebook.read import record_of  # noqa: PLC0415 - by kind of file
-
-    return [record_of(cells_of(load_notebook(path), str(path)), str(path))]
-
-
-def _content(path: Path) -> bytes:
-    """Read a file, never more than a package could hold."""
-    with path.open("rb") as stream:
-        content = stream.read(LARGEST_FILE + 1)
-    if len(content) > LARGEST_FILE:
-        raise UserError(f"{path}: larger than {LARGEST_FILE // 1_000_000} MB; not read")
-    return content
-
-
-def _from_pdf(path: Path) -> list[Record]:
-    from lineproof.package import records_in_pdf  # noqa: PLC0415 - by kind of file
-
-    return [Record.from_data(data) for data in records_in_pdf(_content(path))]
-
-
-def _from_html(path: Path) -> list[Record]:
-    from lineproof.package import records_in_html  # noqa: PLC0415 - by kind of file
-
-    return [Record.from_data(data) for data in records_in_html(_content(path).decode())]
-
-
-def _from_json(path: Path) -> list[Record]:
-    return [Record.from_text(_content(path).decode())]
 
 
 def as_json(records: Iterable[Record]) -> dict[str, Any]:

@@ -11,8 +11,9 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from lineproof.cli.files import write_all
-from lineproof.cli.lines import LARGEST_FILE, MOST_NAMED, read_records
+from lineproof.cli.lines import MOST_NAMED
 from lineproof.errors import FaultList, UserError
+from lineproof.notebook.records import LARGEST_FILE, read_records
 from lineproof.package.reviewed import REVIEW_SUFFIX
 from lineproof.record import Record
 from lineproof.typeset import printable

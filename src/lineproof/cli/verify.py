@@ -9,8 +9,9 @@ from collections.abc import Iterable, Iterator, Sequence
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from lineproof.cli.lines import LARGEST_FILE, MOST_NAMED, read_records
+from lineproof.cli.lines import MOST_NAMED
 from lineproof.errors import UserError
+from lineproof.notebook.records import LARGEST_FILE, read_records
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:

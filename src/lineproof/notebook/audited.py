@@ -1,0 +1,143 @@
+"""An audit by files: a stored calculation, another engineer's figures, what a drawing shows."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import replace
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
+
+from lineproof.audit.audit import audit_alone, audit_claims
+from lineproof.audit.claims import read_claims
+from lineproof.audit.data import Audit, Finding
+from lineproof.audit.drawing import drawing_findings
+from lineproof.audit.findings import importance
+from lineproof.audit.graph import Graph
+from lineproof.audit.junior import Cell, audit_cells
+from lineproof.audit.tables import read_table
+from lineproof.errors import UserError
+from lineproof.notebook.cells import cells_of, joined, load_notebook
+from lineproof.notebook.read import calc_of
+from lineproof.notebook.records import altered_lines, read_records
+from lineproof.record import Record
+
+if TYPE_CHECKING:
+    from lineproof.sheet import Sheet
+
+_MOST_NAMED = 3
+
+
+class CalcAudit:
+    """The audit of a calculation on a sheet of its own; each call records and shows its parts."""
+
+    def __init__(self, sheet: Sheet, graph: Graph, audit: Audit) -> None:
+        from lineproof.audit.report import Report  # noqa: PLC0415 - 0.5 s with all that it prints
+
+        self.audit = audit
+        self._report = Report(sheet, audit, graph)
+
+    def compared(self) -> None:
+        """Record what was compared with what, and how many findings and lines there are."""
+        self._report.compared()
+
+    def findings(self) -> None:
+        """Record the findings by severity, each with its slip and its effects on the checks."""
+        self._report.findings()
+
+    def judged(self) -> None:
+        """Record every claim with what follows from it and what is right; what was not claimed."""
+        self._report.judged()
+
+
+def audit_of(
+    sheet: Sheet,
+    calc: str,
+    *,
+    claims: str | None = None,
+    drawing: str | None = None,
+    calc_id: str | None = None,
+) -> CalcAudit:
+    """Audit a stored calculation, whose file is named beside the notebook; none of it is run.
+
+    ``claims`` is a table of what another engineer calculated, ``drawing`` one of what is drawn;
+    ``calc_id`` says which calculation of a package of several. Raises :class:`UserError`.
+    """
+    path = Path(calc)
+    graph = Graph(picked(read_records(path), path, calc_id))
+    return CalcAudit(
+        sheet, graph, audited(graph, path, *(Path(p) if p else None for p in (claims, drawing)))
+    )
+
+
+def audited(graph: Graph, path: Path, claims: Path | None, drawing: Path | None) -> Audit:
+    """Return the audit of a record that was read from a file, by claims or by itself."""
+    record = graph.record
+    if claims is None:
+        audit = audit_alone(record, _of_notebook(path, record))
+    else:
+        _refuse_altered(record, path)
+        audit = audit_claims(record, read_claims(graph, claims), graph)
+    if drawing is None:
+        return audit
+    found = [*audit.findings, *_of_drawing(drawing, record)]
+    return replace(audit, findings=tuple(sorted(found, key=importance)))
+
+
+def picked(records: Sequence[Record], path: Path, calc: str | None) -> Record:
+    """Return the one record asked for; raises :class:`UserError` that names them all."""
+    ids = [record.calc_id for record in records]
+    named = ", ".join(ids)
+    if calc is None:
+        if len(records) == 1:
+            return records[0]
+        raise UserError(f"{path}: holds {len(records)} calcs ({named}); say which: --calc {ids[0]}")
+    found = [record for record in records if record.calc_id == calc]
+    if not found:
+        raise UserError(f"{path}: holds no calc {calc!r}; write --calc with one of {named}")
+    if len(found) > 1:
+        raise UserError(f"{path}: holds the calc {calc!r} {len(found)} times; give its record file")
+    return found[0]
+
+
+def _of_drawing(path: Path, record: Record) -> tuple[Finding, ...]:
+    rows = read_table(path).rows
+    try:
+        return drawing_findings(record, rows)
+    except UserError as error:
+        raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
+
+
+def _refuse_altered(record: Record, path: Path) -> None:
+    """Refuse to judge claims by a record that does not follow from its own inputs."""
+    altered = altered_lines(record)
+    if altered:
+        first = "; ".join(altered[:_MOST_NAMED])
+        more = f" and {len(altered) - _MOST_NAMED} more" if len(altered) > _MOST_NAMED else ""
+        raise UserError(
+            f"{path}: {record.calc_id} does not follow from its own inputs ({first}{more}); claims "
+            "are judged by a right calculation only, so audit this one without --claims first"
+        )
+
+
+def _of_notebook(path: Path, record: Record) -> tuple[Finding, ...]:
+    """Return what is found in the cells of a notebook; nothing for another kind of file."""
+    if path.suffix.lower() != ".ipynb":
+        return ()
+    data = load_notebook(path)
+    remarks: Sequence[str] = ()
+    try:
+        calc_of(data, path.name)
+    except UserError as error:
+        remarks = error.faults
+    cells = [
+        Cell(c.number, c.kind, c.source, c.tags, c.count, tuple(map(_text, c.outputs)))
+        for c in cells_of(data, str(path))
+    ]
+    return audit_cells(cells, record, remarks)
+
+
+def _text(output: Mapping[str, Any]) -> str:
+    """Return the text of a cell's output, as it stands there."""
+    data = output.get("data", {})
+    text = output.get("text", data.get("text/plain", output.get("evalue", "")))
+    return joined(text) if isinstance(text, str | list) else ""
