@@ -26,9 +26,14 @@ class Work {
       this.saved.set(calc, toText(review));
     }
     for (const calc of this.calcs) {
-      const kept = this.tryRead(this.stored(this.key(calc)));
-      if (kept && kept.calc === calc.id) this.reviews.set(calc, merged(this.reviews.get(calc), kept));
+      const [base, text] = (this.stored(this.key(calc)) ?? "").split("\0");
+      const kept = this.tryRead(text);
+      if (!kept || kept.calc !== calc.id) continue;
+      // What was taken back here stays so; a review printed anew comes in beside.
+      const printed = this.reviews.get(calc);
+      this.reviews.set(calc, base === this.base(calc) ? kept : merged(printed, kept));
     }
+    for (const calc of this.calcs) this.base(calc); // before a file is saved
     const [name, initials] = (this.stored("lineproof reviewer") ?? "").split("\n");
     this.name = name ?? "";
     this.initials = initials ?? "";
@@ -44,6 +49,13 @@ class Work {
 
   key(calc) {
     return `lineproof review ${calc.digest}`;
+  }
+
+  // Names the review that was printed with the package, as this browser first saw it.
+  base(calc) {
+    this.bases ??= new Map();
+    if (!this.bases.has(calc)) this.bases.set(calc, fingerprint(this.saved.get(calc)));
+    return this.bases.get(calc);
   }
 
   stored(key) {
@@ -97,7 +109,7 @@ class Work {
 
   changed(calc) {
     this.index(calc);
-    this.store(this.key(calc), toText(this.reviews.get(calc)));
+    this.store(this.key(calc), `${this.base(calc)}\0${toText(this.reviews.get(calc))}`);
   }
 
   // What keeps the person named from marking, as a sentence; "" for nothing.
@@ -212,6 +224,14 @@ class Work {
     const place = after === -1 ? this.steps.length : after;
     return direction > 0 ? place - 1 : place;
   }
+}
+
+function fingerprint(text) {
+  let hash = 0;
+  for (let place = 0; place < text.length; place += 1) {
+    hash = (Math.imul(hash, 31) + text.charCodeAt(place)) >>> 0;
+  }
+  return `${text.length}-${hash}`;
 }
 
 function isBefore(one, other) {

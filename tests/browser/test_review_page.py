@@ -521,6 +521,19 @@ def test_marks_are_kept_in_the_browser_until_they_are_saved(opened: Open) -> Non
     assert page.locator("[data-rv=person-name]").inner_text() == "Reviewed by Kei Mori (KM)"
 
 
+def test_a_printed_mark_that_was_taken_back_does_not_come_back(opened: Open) -> None:
+    """The page holds the printed review for ever; what was done since counts."""
+    review = marked(
+        Review("B1", reviewers=(MORI,)), beam(), ["last/r", "data/b"], by="Kei Mori", at=AT
+    )
+    page = opened(html_with(review))
+    row(page, "last/r").locator(".result").click()
+    page.keyboard.press("x")
+    page.reload()
+    page.get_by_role("button", name="Review", exact=True).click()
+    assert margins(page) == {"data/b": "✓ accepted"}
+
+
 def test_a_browser_that_keeps_nothing_is_told_of(opened: Open, context: BrowserContext) -> None:
     context.add_init_script(
         "Object.defineProperty(window, 'localStorage', { get() { throw new Error('no'); } });"
