@@ -18,7 +18,7 @@ from lineproof.audit.slip_values import others_for
 from lineproof.audit.slip_whole import edits_of_copy, edits_of_result
 from lineproof.errors import UserError
 
-FARTHER = 0.25
+FARTHER = 0.1
 """By so much (natural logarithm) a slip is less likely for each line it lies further up."""
 LOOSE, ROUNDED = 1.5, 0.006
 """At first fits are sought so many widths wide, and for the width that another value of three
