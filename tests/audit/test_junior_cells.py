@@ -122,6 +122,19 @@ def test_a_symbol_of_nobody_is_not_compared() -> None:
     assert findings("w_cb = 24*0.15*0.3\nq_x = w_cb*3 + 1", None) == ()
 
 
+@pytest.mark.parametrize(
+    "source",
+    [
+        "if True:\n    %time x = 1\n    !ls\nM_r = A_s*f_y*(d - a/2)",
+        "help?\nM_r = A_s*f_y*(d - a/2)  # is this right?",
+        "M_r = (A_s*f_y\n       *(d - a/2))",
+        "x = '\\n%run'\r\nM_r = A_s*f_y*(d - a/2)",
+    ],
+)
+def test_formulas_are_read_beside_magics(source: str) -> None:
+    assert said(findings(source, None), "differs from 10.1: phi_s is missing")
+
+
 def test_a_letter_of_code_may_be_anything(record: Record) -> None:
     for held in (None, record):
         assert findings("a = 3\nc = a*7 + 2\nd = 'x'\nz = 12", held) == ()
@@ -158,6 +171,21 @@ def test_a_result_typed_where_its_line_stands(record: Record) -> None:
 @pytest.mark.parametrize("source", ["f_c = 32", "f_c = 32  # MPa", "b_w = 0.38  # m", "h = 620"])
 def test_an_input_typed_as_it_stands_is_silent(source: str, record: Record) -> None:
     assert findings(source, record) == ()
+
+
+@pytest.mark.parametrize(
+    ("source", "told"),
+    [
+        ("f_c = 32*u.MPa", False),
+        ("f_c = 32000*u.kPa", False),
+        ("b_w = 38*ureg.cm", False),
+        ("f_c = 35*u.MPa", True),
+        ("f_c = 32*u.kPa", True),
+        ("M_r = (phi_s*A_s*f_y*(d - a/2)).to('kN*m').magnitude", False),
+    ],
+)
+def test_quantities_with_units_are_read(source: str, record: Record, *, told: bool) -> None:
+    assert bool(findings(source, record)) is told
 
 
 def test_a_stress_in_kpa_is_told(record: Record) -> None:

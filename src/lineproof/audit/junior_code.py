@@ -15,7 +15,7 @@ from lineproof.audit.junior_catalogue import catalogue_of
 from lineproof.audit.junior_cells import PARAMETERS
 from lineproof.audit.junior_formula import Hand, Lookup, judged
 from lineproof.audit.junior_givens import RESULTS
-from lineproof.audit.junior_python import Assigned, Code, assigned, recorded
+from lineproof.audit.junior_python import Assigned, Code, assigned, recorded, written
 from lineproof.audit.junior_scope import Scope, finding, listed, name_of, printed, units_of
 from lineproof.errors import UserError
 from lineproof.formula import Name, Tree, names_of, parse_line
@@ -260,6 +260,7 @@ def _unit_said(made: Assigned) -> str:
 def _radians(code: Code, values: Mapping[str, float]) -> Iterator[Finding]:
     if code.tree is None:
         return
+    lines = code.source.split("\n")
     for node in ast.walk(code.tree):
         if not isinstance(node, ast.Call) or called(node) not in TRIGONOMETRIC or not node.args:
             continue
@@ -273,7 +274,7 @@ def _radians(code: Code, values: Mapping[str, float]) -> Iterator[Finding]:
         except (ArithmeticError, ValueError):
             continue
         if abs(angle) > _TURN:
-            text = " ".join((ast.get_source_segment(code.source, node) or "").split())[:80]
+            text = written(lines, node)[:80]
             yield finding(
                 Severity.MAJOR,
                 f"{code.cell.name}: {text} takes an angle of {angle:.4g} as radians; it is in "

@@ -5,14 +5,16 @@ from __future__ import annotations
 import ast
 import re
 import warnings
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
 
 from lineproof.audit.junior_arithmetic import last_name, symbol_of, tree_of
 from lineproof.audit.junior_cells import CODE, LONGEST_CELL, Cell
 from lineproof.formula import Tree
 
-_MAGIC = re.compile(r"^\s*([%!?]|.*\?\s*$)")
+_MAGIC = re.compile(r"(\s*)(?:[%!?]|[\w.]+\?{1,2}\s*$)")
+_MOST_LINES = 20
+_LONGEST_TEXT = 400
 
 
 @dataclass(frozen=True, slots=True)
@@ -61,8 +63,14 @@ def read_code(cell: Cell) -> Code | None:
         return Code(cell, None, "", f"longer than {LONGEST_CELL} characters")
     if cell.source.lstrip().startswith("%%"):
         return Code(cell, None, "", "not Python, but for another program")
-    lines = ["pass" if _MAGIC.match(line) else line for line in cell.source.split("\n")]
-    source = "\n".join(lines)
+    source = cell.source.replace("\r\n", "\n").replace("\r", "\n").replace("\f", " ")
+    code = _parsed(cell, source)
+    if code.tree is None and any(map(_MAGIC.match, source.split("\n"))):
+        code = _parsed(cell, "\n".join(map(_without_magic, source.split("\n"))))
+    return code
+
+
+def _parsed(cell: Cell, source: str) -> Code:
     try:
         with warnings.catch_warnings():
             warnings.simplefilter("ignore")
@@ -73,6 +81,11 @@ def read_code(cell: Cell) -> Code | None:
         return Code(cell, None, "", "nested too deeply or damaged")
 
 
+def _without_magic(line: str) -> str:
+    found = _MAGIC.match(line)
+    return f"{found[1]}pass" if found else line
+
+
 def assigned(code: Code) -> Iterator[Assigned]:
     """Give the assignments of a cell in order."""
     lines = code.source.split("\n")
@@ -80,16 +93,32 @@ def assigned(code: Code) -> Iterator[Assigned]:
         target, value = _target(statement)
         if target is None or value is None:
             continue
-        text = ast.get_source_segment(code.source, value) or ""
+        text = written(lines, value) if hasattr(value, "lineno") else ""
         typed = value.value if isinstance(value, ast.Constant) else None
-        comment = ""
-        if statement.end_lineno and statement.end_lineno <= len(lines):
-            rest = lines[statement.end_lineno - 1].encode()[statement.end_col_offset or 0 :]
-            comment = rest.decode(errors="replace").partition("#")[2].strip()
+        _, _, comment = _cut(lines, statement.end_lineno, statement.end_col_offset).partition("#")
         yield Assigned(
-            code.cell, target, symbol_of(target), " ".join(text.split()), tree_of(value),
-            typed if isinstance(typed, str) else "", comment, plain,
+            code.cell, target, symbol_of(target), text, tree_of(value),
+            typed if isinstance(typed, str) else "", comment.strip(), plain,
         )  # fmt: skip
+
+
+def written(lines: Sequence[str], node: ast.expr) -> str:
+    """Return an expression as it is written, cut where it is long; ``lines`` are the source's."""
+    first, last = node.lineno, node.end_lineno or node.lineno
+    if not 0 < first <= last <= len(lines):
+        return ""
+    end = lines[last - 1].encode()[: node.end_col_offset].decode(errors="replace")
+    start = len(lines[first - 1].encode()[: node.col_offset].decode(errors="replace"))
+    held = [*lines[first - 1 : min(last - 1, first + _MOST_LINES)], end]
+    held[0] = held[0][start:]
+    return " ".join(" ".join(held).split())[:_LONGEST_TEXT]
+
+
+def _cut(lines: Sequence[str], line: int | None, column: int | None) -> str:
+    """Return what stands behind a place in its line."""
+    if not line or line > len(lines):
+        return ""
+    return lines[line - 1].encode()[column or 0 :].decode(errors="replace")
 
 
 def _target(statement: ast.stmt) -> tuple[str | None, ast.expr | None]:
