@@ -6,9 +6,7 @@ finite numbers, everything near the field of paper, sizes within limits.
 
 from __future__ import annotations
 
-from collections.abc import Hashable
 from dataclasses import MISSING, fields
-from functools import cache
 from typing import Any
 
 from lineproof.drawing import json_values
@@ -35,6 +33,7 @@ _KINDS: dict[str, type[Shape]] = {
     "dimension": Dimension,
 }
 _NAMES = {kind: name for name, kind in _KINDS.items()}
+_DEFAULTS = {kind: [(field.name, field.default) for field in fields(kind)] for kind in _NAMES}
 _FIGURE_FIELDS = ("width", "height", "scale", "origin", "shapes", "alt", "caption")
 MAX_SHAPES = 4000
 MAX_POINTS = 40_000
@@ -61,17 +60,11 @@ def to_json(figure: Figure) -> dict[str, Any]:
 
 def _shape_json(shape: Shape) -> dict[str, Any]:
     data: dict[str, Any] = {"shape": _NAMES[type(shape)]}
-    kind: Hashable = type(shape)
-    for name, default in _defaults(kind):
+    for name, default in _DEFAULTS[type(shape)]:
         value = getattr(shape, name)
         if value != default:
             data[name] = _plain(value)
     return data
-
-
-@cache
-def _defaults(kind: Any) -> tuple[tuple[str, Any], ...]:
-    return tuple((field.name, field.default) for field in fields(kind))
 
 
 def _plain(value: object) -> object:

@@ -18,6 +18,7 @@ from lineproof.record.entry import CHECK, CRITERIA, FOUND, GIVEN, LINE, LOOKUP, 
 from lineproof.record.printing import ratio
 from lineproof.record.procedures import recall, run
 from lineproof.record.record import Record
+from lineproof.record.uncollected import uncollected
 
 SAME = 1e-9
 """Relative difference up to which two computed floats count as the same."""
@@ -49,6 +50,11 @@ def recompute(record: Record) -> list[Difference]:
 
     Values are recomputed from the givens on, so one wrong line shows with all that follow it.
     """
+    with uncollected():
+        return _all_differences(record)
+
+
+def _all_differences(record: Record) -> list[Difference]:
     values: dict[str, float] = {}
     units = {i: entry["unit"] for i, entry in record.entries.items() if "unit" in entry}
     differences: list[Difference] = []

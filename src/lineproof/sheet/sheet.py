@@ -16,6 +16,7 @@ from lineproof.record import Entry, Part, Record
 from lineproof.record.build import PartByPart, build, labels_of
 from lineproof.record.entry import CHECK, DECISION, GIVEN, LINE, LOOKUP
 from lineproof.record.sources import GivenSource, LookupSource
+from lineproof.record.uncollected import uncollected
 from lineproof.sheet.finding import NOT_COMPUTED, Finding
 from lineproof.sheet.order import behind, in_order, out_of_date
 from lineproof.sheet.own import own_criterion
@@ -287,8 +288,9 @@ class Sheet(Finding):
         faults += out_of_date(self._parts, self.expected)
         if faults:
             raise UserError(f"{self.calc['id']}: {fault}" for fault in faults)
-        # Read as any other record: what could not be read back is refused here.
-        return Record.from_data(self.view(in_order(self._parts)))
+        with uncollected():
+            # Read as any other record: what could not be read back is refused here.
+            return Record.from_data(self.view(in_order(self._parts)))
 
     def view(self, parts: Iterable[Part]) -> dict[str, Any]:
         """Return the record data of some parts, without the checks of :meth:`close`."""
