@@ -8,9 +8,10 @@ from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
     from lineproof import beams
+    from lineproof.notebook.audited import audit_of
     from lineproof.sheet import Sheet
 
-__all__ = ["Sheet", "beams"]
+__all__ = ["Sheet", "audit_of", "beams"]
 
 
 def __getattr__(name: str) -> Any:
@@ -21,6 +22,10 @@ def __getattr__(name: str) -> Any:
         return Sheet
     if name == "beams":
         return import_module("lineproof.beams")
+    if name == "audit_of":
+        from lineproof.notebook.audited import audit_of  # noqa: PLC0415 - as the docstring says
+
+        return audit_of
     msg = f"module 'lineproof' has no attribute {name!r}"
     raise AttributeError(msg)
 

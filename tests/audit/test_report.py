@@ -108,10 +108,10 @@ def test_nothing_found_says_so() -> None:
 def test_report_names_what_it_is_who_made_it_and_its_own_cautions(audit: Audit) -> None:
     package = audit_report(audit, beam(), checker="P. N.", date="2026-12-01")
 
-    assert package.kind == "Audit report of a structural calculation"
+    assert package.words.kind == "Audit report of a structural calculation"
     assert package.facts.signatures[0].value == "P. N."
     assert package.facts.date_text == "2026-12-01"
-    assert "proves no calculation right" in package.cautions[0]
+    assert "proves no calculation right" in package.words.cautions[0]
     assert package.failures == ()
 
 

@@ -8,7 +8,6 @@ from __future__ import annotations
 
 from collections import Counter
 from collections.abc import Iterable, Iterator, Mapping, Sequence
-from dataclasses import replace
 from itertools import groupby
 from typing import Any
 
@@ -16,6 +15,7 @@ from lineproof.audit.data import Audit, Effect, Finding, Interval, Judged, Sever
 from lineproof.audit.graph import Graph, Node
 from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
+from lineproof.package.words import AUDIT_REPORT
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
@@ -24,8 +24,6 @@ from lineproof.typeset.values import number_text, unit_text
 
 MOST_EFFECTS = 12
 MOST_SLIPS = 3
-KIND = "Audit report of a structural calculation"
-_MEMBER = "audit report"
 _LONGEST_ID = 40
 _DIGITS = 4
 _THEN = {
@@ -40,20 +38,6 @@ _JUDGED = ["Line", "Quantity", "Claimed", "Follows from the claims", "Right", "V
 _JUDGED_WIDTHS = (12, 50, 20, 31, 20, 21)
 _EFFECTS = ["Line", "Check", "Where", "As claimed", "Right", "When put right"]
 _EFFECT_WIDTHS = (12, 46, 42, 18, 16, 20)
-_CAUTIONS = (
-    (
-        "An audit finds what its searches look for. That nothing is found proves no calculation "
-        "right: assumptions, loads and drawings stay with the engineers responsible."
-    ),
-    (
-        "A slip named beside a finding gives the claimed value to its digits; that it was made is "
-        "likely, not proved."
-    ),
-    (
-        "The purchased standard, the local building code and its amendments govern; clause "
-        "numbers here point to them and do not replace them."
-    ),
-)
 _NO_CLAIMS = (
     "The record was searched by itself: its lines worked again, its formulas compared with the "
     "catalogue, checks that are missing, and rules for usual slips. Nothing was claimed against it."
@@ -72,17 +56,7 @@ def audit_report(audit: Audit, record: Record, *, checker: str = "", date: str =
 
     ``record`` is the one that was audited. Raises :class:`UserError` for a wrong date.
     """
-    return as_report(build_package([report_record(audit, record, checker=checker, date=date)]))
-
-
-def is_report(record: Record) -> bool:
-    """Tell whether a record is that of an audit report."""
-    return bool(record.data["kind_of_member"] == _MEMBER)
-
-
-def as_report(package: Package) -> Package:
-    """Return the package of a report's record with the words of a report."""
-    return replace(package, kind=KIND, chapter="Findings", cautions=_CAUTIONS)
+    return build_package([report_record(audit, record, checker=checker, date=date)])
 
 
 def report_files(
@@ -133,7 +107,7 @@ class Report:
 
     def __init__(self, sheet: Sheet, audit: Audit, graph: Graph) -> None:
         self.sheet, self.audit, self.graph = sheet, audit, graph
-        sheet.codes, sheet.member = dict(graph.record.data["codes"]), _MEMBER
+        sheet.codes, sheet.member = dict(graph.record.data["codes"]), AUDIT_REPORT
         self.slips = {judged.id: judged.slips for judged in audit.judged}
         self.titles = {part["key"]: part["title"] for part in graph.record.parts}
 

@@ -6,7 +6,6 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from typing import Any
 
-from lineproof.audit.report import as_report, is_report
 from lineproof.audit.review_print import printed_review
 from lineproof.audit.review_read import read_review
 from lineproof.audit.verify_data import Alteration, Where
@@ -111,8 +110,6 @@ def printed_again(
             for source in sources
         ],
     )
-    if any(is_report(source.record) for source in sources):
-        package = as_report(package)
     if paper in PAPERS.values():
         package = replace(package, facts=replace(package.facts, paper=paper))
     return package

@@ -31,6 +31,7 @@ from lineproof.package.summary import (
     notation_rows,
     summary_rows,
 )
+from lineproof.package.words import Words, words_of
 from lineproof.record.plain_data import json_text
 from lineproof.typeset.glyphs import has_missing, tree_has_missing
 from lineproof.typeset.nodes import EQUALS, Math, row
@@ -42,39 +43,18 @@ Walk = Iterable[tuple[str, str]]
 
 _PART_LEVEL, _DEEPEST_LEVEL = 2, 4
 
-CAUTIONS = (
-    (
-        "This package is not valid until it has been reviewed and sealed by the licensed engineer "
-        "responsible for the work."
-    ),
-    (
-        "The purchased standard, the local building code and its amendments govern; clause "
-        "numbers here point to them and do not replace them."
-    ),
-    "Gravity beams only: the members of this package are not part of the lateral-load system.",
-    (
-        "Values and rules from memory are listed under “Values to confirm”; the office confirms "
-        "each in its own copy of the standard."
-    ),
-)
-
 
 @dataclass(frozen=True, slots=True)
 class Package:
-    """A whole package: the project's facts once, then one or many calcs.
-
-    ``kind`` says on the cover what it is, ``chapter`` what its lines are called.
-    """
+    """A whole package: the project's facts once, then one or many calcs."""
 
     title: str
     facts: ProjectFacts
     calcs: tuple[Calc, ...]
     notation: tuple[NotationRow, ...]
     missing_glyphs: bool
-    cautions: tuple[str, ...] = CAUTIONS
+    words: Words
     reviews: tuple[PrintedReview, ...] = ()
-    kind: str = "Structural calculation package"
-    chapter: str = "Working"
 
     @property
     def failures(self) -> tuple[Failure, ...]:
@@ -150,6 +130,7 @@ def build_package(
         notation=notation_rows(data),
         missing_glyphs=any(tree_has_missing(record) for record in data)
         or any(has_missing(review.text) for review in reviewed),
+        words=words_of(record["kind_of_member"] for record in data),
         reviews=tuple(reviewed),
     )
 
