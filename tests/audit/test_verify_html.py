@@ -48,7 +48,7 @@ def test_prose_is_told_apart_and_a_notebook_proves_it() -> None:
     assert checked(forged, against).outcome is Outcome.ALTERED
 
 
-@settings(max_examples=60, deadline=None, suppress_health_check=[HealthCheck.too_slow])
+@settings(max_examples=40, deadline=None, suppress_health_check=[HealthCheck.too_slow])
 @given(data=st.data())
 def test_any_other_digit_anywhere_in_the_print_is_found(data: st.DataObject) -> None:
     place = data.draw(st.sampled_from(digits()))

@@ -75,13 +75,13 @@ def caught(content: bytes, name: str) -> bool:
 PLACES = tuple(numbers(by.record().data))
 
 
-@settings(max_examples=60, deadline=None, suppress_health_check=[HealthCheck.too_slow])
+@settings(max_examples=40, deadline=None, suppress_health_check=[HealthCheck.too_slow])
 @given(spot=st.sampled_from(PLACES))
 def test_any_number_of_the_record_changed_is_found_in_a_page(spot: tuple[Path, int]) -> None:
     assert caught(page_with(changed(*spot)).encode(), "b.html"), spot
 
 
-@settings(max_examples=15, deadline=None, suppress_health_check=[HealthCheck.too_slow])
+@settings(max_examples=10, deadline=None, suppress_health_check=[HealthCheck.too_slow])
 @given(spot=st.sampled_from(PLACES))
 def test_any_number_of_the_record_changed_is_found_in_a_pdf(spot: tuple[Path, int]) -> None:
     assert caught(pdf_with(changed(*spot)), "b.pdf"), spot

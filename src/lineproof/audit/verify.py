@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from lineproof.audit.verify_data import Alteration, Outcome, Outside, Proof, Verification, Where
+from lineproof.audit.verify_file import is_pdf
 from lineproof.audit.verify_html import verify_html
-from lineproof.audit.verify_pdf import is_pdf, verify_pdf
+from lineproof.audit.verify_pdf import verify_pdf
 from lineproof.audit.verify_record import Source
 from lineproof.errors import UserError
 

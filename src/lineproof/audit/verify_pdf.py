@@ -2,15 +2,13 @@
 
 from __future__ import annotations
 
-import io
-import logging
 import re
-from collections.abc import Iterator, Sequence
-from contextlib import contextmanager
+from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 from typing import Any
 
 from lineproof.audit.verify_data import Alteration, Outcome, Outside, Proof, Verification, Where
+from lineproof.audit.verify_file import END, File, silent
 from lineproof.audit.verify_page import Document, Keys, Kind, Mark, Zone
 from lineproof.audit.verify_printed import compare_pages
 from lineproof.audit.verify_record import (
@@ -23,32 +21,19 @@ from lineproof.audit.verify_record import (
     printed_again,
 )
 from lineproof.errors import UserError
-from lineproof.package import records_in_pdf, to_pdf
-from lineproof.package.reviewed import REVIEW_SUFFIX
+from lineproof.package import to_pdf
 from lineproof.record import Record
 
-_SUFFIX = ".lineproof.json"
 _FOOTER = re.compile(r"Record ([0-9a-f]{16}[0-9a-f ]*…?)\Z")
 _MARKED = b"/Subtype/Footer/Type/Pagination"
-_END = re.compile(rb"%%EOF[\r\n]{0,2}")
-_TABLE_AT = re.compile(rb"startxref\s+(\d{1,12})\s")
-_TABLE = re.compile(rb"\s*(?:xref|\d+ \d+ obj)")
-_HEAD, _TAIL = 1024, 4096
-_LETTER, _A4 = (612.0, 792.0), (595.28, 841.89)
-_LINK = "/Link"
-
-
-def is_pdf(content: bytes) -> bool:
-    """Tell whether a file begins as a PDF."""
-    return b"%PDF-" in content[:_HEAD]
 
 
 def verify_pdf(content: bytes, name: str, against: Sequence[Source] = ()) -> Verification:
     """Verify a PDF; raises :class:`UserError` for one that cannot be read."""
-    with _silent():
-        file = _File(content)
+    with silent():
+        file = File(content)
         found = _Checking(file, against).verification(name)
-        ends = [end.end() for end in _END.finditer(content)]
+        ends = [end.end() for end in END.finditer(content)]
         if found.outcome is Outcome.ALTERED and len(ends) > 1:
             found = _issued_intact(found, content[: ends[0]], name, against)
     return found
@@ -59,123 +44,13 @@ def _issued_intact(
 ) -> Verification:
     """Say so where what was altered was appended to a file that was intact."""
     try:
-        issued = _Checking(_File(first), against).verification(name)
+        issued = _Checking(File(first), against).verification(name)
     except UserError:
         return found
     if not issued.intact:
         return found
     told = f"the first {len(first)} bytes are the package as issued, intact: the change is appended"
     return replace(found, remarks=(*found.remarks, told))
-
-
-@contextmanager
-def _silent() -> Iterator[None]:
-    """Keep the PDF library from writing its warnings between our own sentences."""
-    logger = logging.getLogger("pypdf")
-    level = logger.level
-    logger.setLevel(logging.CRITICAL + 1)
-    try:
-        yield
-    finally:
-        logger.setLevel(level)
-
-
-def _table_found(content: bytes) -> bool:
-    """Tell whether the table of objects stands where the file says."""
-    said = _TABLE_AT.findall(content[-_TAIL:])
-    header = content.find(b"%PDF-")
-    places = (int(said[-1]), int(said[-1]) + header) if said else ()
-    return any(_TABLE.match(content, place) for place in places)
-
-
-class _File:
-    """A PDF opened: its pages, what is attached to it, what others have done to it."""
-
-    def __init__(self, content: bytes) -> None:
-        import pypdf  # noqa: PLC0415 - only reading a PDF needs it
-
-        self.content = content
-        if not is_pdf(content):
-            raise UserError("not a PDF, whatever its name says; give a package as it was issued")
-        if not _END.search(content):
-            raise UserError("this PDF is damaged, its end is missing; give the whole file")
-        if not _table_found(content):
-            raise UserError(
-                "this PDF is damaged, bytes are missing inside; give the file as issued"
-            )
-        try:
-            self.reader = pypdf.PdfReader(io.BytesIO(content))
-            locked = self.reader.is_encrypted
-            self.pages: list[Any] = [] if locked else list(self.reader.pages)
-            self.attached: dict[str, list[bytes]] = (
-                {} if locked else {name: list(parts) for name, parts in self._attachments()}
-            )
-        except Exception as error:  # noqa: BLE001 - damage makes it fail in any of its layers
-            reason = f"{type(error).__name__}: {error}"[:80]
-            raise UserError(f"this PDF cannot be read, it is damaged ({reason})") from None
-        if locked:
-            raise UserError("this PDF is encrypted; give it without a password")
-
-    def _attachments(self) -> Iterator[tuple[str, list[bytes]]]:
-        for name, parts in self.reader.attachments.items():
-            if parts:
-                yield str(name), parts if isinstance(parts, list) else [parts]
-
-    def records(self) -> list[Record]:
-        """Return the records attached, in order; raises :class:`UserError`."""
-        if not any(name.endswith(_SUFFIX) for name in self.attached):
-            return []
-        return [Record.from_data(data) for data in records_in_pdf(self.content)]
-
-    def review(self, calc: str) -> str:
-        """Return the text of the review attached for a calculation, "" if there is none."""
-        parts = self.attached.get(f"{calc}{REVIEW_SUFFIX}", [])
-        return parts[0].decode("utf-8", "replace") if parts else ""
-
-    def paper(self, page: Any) -> str:
-        """Return the paper of a page as the package names it, "" for any other."""
-        size = (float(page.mediabox.width), float(page.mediabox.height))
-        for paper, wanted in (("us-letter", _LETTER), ("a4", _A4)):
-            if all(abs(a - b) < 1 for a, b in zip(size, wanted, strict=True)):
-                return paper
-        return ""
-
-    def handled(self) -> list[str]:
-        """Say what others have done that alters no line: revisions, signatures, saving again."""
-        told = []
-        ends = len(_END.findall(self.content))
-        if ends > 1:
-            told.append(f"{ends - 1} later change(s) appended to the file as issued")
-        told += [f"signed by others: {signer}; the signature itself is not checked here"
-                 for signer in self._signers()]  # fmt: skip
-        metadata: Any = self.reader.metadata
-        producer = str(metadata.get("/Producer", "")) if metadata else ""
-        if producer:
-            told.append(f"saved again by {producer[:60]}")
-        return told
-
-    def _signers(self) -> list[str]:
-        form = self.reader.root_object.get("/AcroForm")
-        fields = form.get_object().get("/Fields", []) if form is not None else []
-        signed = []
-        for reference in fields:
-            entry = reference.get_object()
-            if entry.get("/FT") == "/Sig":
-                value = entry.get("/V")
-                named = value.get_object().get("/Name", "") if value is not None else ""
-                signed.append(str(named or entry.get("/T", "") or "no name given")[:60])
-        return signed
-
-    def annotations(self, page: Any) -> list[str]:
-        """Name what others have laid over a page: comments, stamps, signatures that show."""
-        found = []
-        for reference in page.get("/Annots", None) or []:
-            entry = reference.get_object()
-            kind = str(entry.get("/Subtype", ""))
-            if kind != _LINK or "/AP" in entry:
-                text = str(entry.get("/Contents", "") or "")[:60]
-                found.append(f"{kind.lstrip('/') or 'annotation'}{f' “{text}”' if text else ''}")
-        return found
 
 
 @dataclass
@@ -217,7 +92,7 @@ def _fits(page: _Own, home: _Own) -> bool:
 class _Checking:
     """Everything that is looked at in one file."""
 
-    def __init__(self, file: _File, against: Sequence[Source]) -> None:
+    def __init__(self, file: File, against: Sequence[Source]) -> None:
         self.file, self.against = file, against
         self.keys = Keys()
         self.printed: dict[tuple[str, ...], bytes] = {}
@@ -249,7 +124,7 @@ class _Checking:
                 self._compare(own)
         own_pages = sum(len(own.pages) for own in owns) if owns else len(self.file.pages)
         if not sources and not owns:
-            return Verification(name, Outcome.NOT_OURS, pages=len(self.file.pages))
+            return self._without_our_pages(name)
         self._others(owns)
         shown = sources or [source for own in owns for source in own.sources]
         return Verification(
@@ -264,6 +139,20 @@ class _Checking:
             pages=len(self.file.pages),
             own_pages=own_pages,
         )
+
+    def _without_our_pages(self, name: str) -> Verification:
+        """Tell a file of others from a package that another program has drawn again."""
+        pages, digest = len(self.file.pages), self.file.digest_redrawn()
+        if not digest:
+            return Verification(name, Outcome.NOT_OURS, pages=pages)
+        known = any(source.record.digest == digest for source in self.against)
+        named = "the record given" if known else f"record {digest}"
+        what = (
+            f"the pages name {named} and have been drawn again by another program: not a mark of "
+            "them can be compared; ask for the file as issued"
+        )
+        altered = (Alteration(Where.DRAWN, what),)
+        return Verification(name, Outcome.STRIPPED, alterations=altered, pages=pages)
 
     def _outcome(self, *, stripped: bool) -> Outcome:
         if stripped:
@@ -359,7 +248,7 @@ class _Checking:
         printed = self._printed(own.sources, self.file.pages[own.pages[0]])
         if not printed:
             return
-        fresh = _File(printed)
+        fresh = File(printed)
         document = Document(self.keys)
         marks = [m for n, page in enumerate(fresh.pages) for m in document.marks(page, n)]
         compared = compare_pages(

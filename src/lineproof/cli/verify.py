@@ -91,11 +91,11 @@ def _verdict(found: Verification) -> Iterator[str]:
 
     if found.outcome is Outcome.NOT_OURS:
         yield "  no record of lineproof in it and no page that one was printed on"
-    elif found.outcome is Outcome.STRIPPED and not found.proofs:
+    elif found.outcome is Outcome.STRIPPED and not (found.proofs or found.alterations):
         yield "  pages of a package without its record; compare them with --against RECORD"
     elif found.outcome is Outcome.STRIPPED and not found.alterations:
         yield "  what is printed is what the record given prints"
-    elif found.alterations:
+    elif found.proofs and found.alterations:
         yield f"  {len(found.alterations)} place(s) altered:"
 
 
