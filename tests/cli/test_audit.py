@@ -15,6 +15,7 @@ from tests.audit import hand
 from tests.audit.hand import beam as hand_beam
 from tests.beams import gallery
 
+from lineproof.audit.review_read import read_review
 from lineproof.cli import main
 from lineproof.errors import UserError
 from lineproof.notebook.audited import picked
@@ -285,3 +286,35 @@ def test_a_drawing_against_the_calc(tmp_path: Path, capsys: Capture) -> None:
     blank.write_text("item,place,drawn,unit,drawing,revision\noverall dpth,,600,mm,S-1,A\n")
     assert audit(path, "--drawing", blank) == 2
     assert f"{blank}: " in capsys.readouterr().err
+
+
+def test_findings_are_raised_in_a_review_once(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    """By a named checker, with the lines they concern; again nothing new, a new claim one more."""
+    file, review = claims(tmp_path, w_f="20 kN/m", b="410 mm"), tmp_path / "H1.review.json"
+    assert audit(record_file, "--claims", file, "--review", review) == 2
+    assert "findings are raised by a person; give --checker NAME" in capsys.readouterr().err
+    assert not review.exists()
+
+    checked = ("--review", review, "--checker", "Ana  Bell")
+    assert audit(record_file, "--claims", file, *checked) == 1
+    made = read_review(review.read_text(encoding="utf-8"))
+    assert [(found.number, found.by, found.standing) for found in made.findings] == [
+        (1, "Ana Bell", "open"), (2, "Ana Bell", "open"),
+    ]  # fmt: skip
+    assert {line for found in made.findings for line in found.lines} == {"given/w_f", "given/b"}
+    assert made.initials("Ana Bell") == "AB"
+
+    assert audit(record_file, "--claims", file, *checked) == 1
+    assert read_review(review.read_text(encoding="utf-8")).findings == made.findings
+    more = claims(tmp_path, w_f="20 kN/m", b="410 mm", h="900 mm")
+    assert audit(record_file, "--claims", more, *checked) == 1
+    again = read_review(review.read_text(encoding="utf-8")).findings
+    assert (len(again), again[:2], again[2].lines) == (3, made.findings, ("given/h",))
+
+    review.write_text(review.read_text(encoding="utf-8").replace('"H1"', '"H9"'), encoding="utf-8")
+    before = review.read_bytes()
+    assert audit(record_file, "--claims", file, *checked) == 2
+    assert "is of calc 'H9', not of 'H1'" in capsys.readouterr().err
+    assert review.read_bytes() == before

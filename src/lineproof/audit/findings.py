@@ -36,6 +36,17 @@ def findings_of(graph: Graph, judged: Sequence[Judged]) -> tuple[Finding, ...]:
     return tuple(sorted(found, key=importance))
 
 
+def named_clause(clause: str) -> str:
+    """Return a clause as a sentence without its stop; what is no clause of a standard is a basis.
+
+    >>> named_clause("11.3.4"), named_clause("statics"), named_clause("")
+    ('Clause 11.3.4', 'Basis: statics', '')
+    """
+    if not clause:
+        return ""
+    return f"Clause {clause}" if any(c.isdigit() for c in clause) else f"Basis: {clause}"
+
+
 def importance(finding: Finding) -> tuple[int, int, float]:
     """Return by what findings are sorted: severity, checks that turn, the largest change."""
     turns = sum(e.holds != e.holds_as_claimed for e in finding.effects)

@@ -12,6 +12,7 @@ from itertools import groupby
 from typing import Any
 
 from lineproof.audit.data import Audit, Effect, Finding, Interval, Judged, Severity, Verdict
+from lineproof.audit.findings import named_clause
 from lineproof.audit.graph import Graph, Node
 from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
@@ -161,7 +162,7 @@ class Report:
         sheet, lines = self.sheet, self._lines(finding.ids)
         head = f"Finding {number}" + (f", {lines}" if lines else "")
         sheet.note(f"finding-{number}", _text(finding.what), title=head, clause="")
-        said = [f"Clause {finding.clause}."] if finding.clause else []
+        said = [f"{named_clause(finding.clause)}."] if finding.clause else []
         said += [_text(finding.advice)] if finding.advice else []
         said += self._other_slips(finding)
         if said:

@@ -118,7 +118,11 @@ def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
     audit.add_argument("--calc", metavar="ID", help="which calc of a package of several")
     audit.add_argument("--json", action="store_true", help="print JSON instead of text")
     audit.add_argument("--into", type=Path, metavar="DIR", help="print the report into a folder")
-    audit.add_argument("--checker", default="", metavar="NAME", help="who audits, for the report")
+    audit.add_argument(
+        "--review", type=Path, metavar="FILE",
+        help="raise the findings in a review record, each that does not stand there yet",
+    )  # fmt: skip
+    audit.add_argument("--checker", default="", metavar="NAME", help="who audits")
     audit.add_argument("--date", default="", metavar="YYYY-MM-DD", help="date of the report")
 
 

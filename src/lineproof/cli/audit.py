@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import argparse
+import datetime as dt
 import json
 import sys
 from pathlib import Path
@@ -12,9 +13,12 @@ from lineproof.audit.data import Audit
 from lineproof.audit.drawing import drawing_blank
 from lineproof.audit.drawing_rows import HEADINGS
 from lineproof.audit.graph import Graph
+from lineproof.audit.review import Review, Reviewer
+from lineproof.audit.review_findings import with_findings
 from lineproof.audit.tables import write_table
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.cli.files import write_all
+from lineproof.cli.review import read_file, refuse_originators
 from lineproof.errors import UserError
 from lineproof.notebook.audited import audited, picked
 from lineproof.notebook.records import read_records
@@ -31,8 +35,12 @@ def run(options: argparse.Namespace) -> int:
         return DONE
     graph = Graph(record)
     audit = audited(graph, options.record, options.claims, options.drawing)
-    if options.into is not None:
-        _print(audit, record, options)
+    files = _report(audit, record, options) if options.into is not None else {}
+    if options.review is not None:
+        files[options.review] = _reviewed(audit, record, options).to_text().encode()
+    if files:
+        write_all(files)
+        sys.stderr.writelines(f"{path}\n" for path in sorted(files))
     if options.json:
         sys.stdout.write(json.dumps(as_data(audit, graph), indent=1, allow_nan=False) + "\n")
     else:
@@ -57,13 +65,27 @@ def _write_blank(record: Record, options: argparse.Namespace) -> None:
     sys.stdout.write(f"{path}: fill in the column '{column}', then give it as --{option}\n")
 
 
-def _print(audit: Audit, record: Record, options: argparse.Namespace) -> None:
-    """Print the report into a folder: all its files or none."""
+def _report(audit: Audit, record: Record, options: argparse.Namespace) -> dict[Path, bytes]:
+    """Return the files of the printed report."""
     from lineproof.audit.report import report_files  # noqa: PLC0415 - 0.5 s with all that it prints
     from lineproof.package.files import file_name  # noqa: PLC0415 - with it
 
     name = f"{file_name(audit.calc)}-audit"
     files = report_files(audit, record, name, checker=options.checker, date=options.date)
-    write_all({options.into / file: content for file, content in files.items()})
-    told = ", ".join(sorted(files))
-    sys.stderr.write(f"{options.into}: {told}\n")
+    return {options.into / file: content for file, content in files.items()}
+
+
+def _reviewed(audit: Audit, record: Record, options: argparse.Namespace) -> Review:
+    """Return the review with the findings raised in it by the checker."""
+    path: Path = options.review
+    name = " ".join(options.checker.split())
+    if not name:
+        raise UserError("--review: findings are raised by a person; give --checker NAME")
+    old = read_file(path) if path.exists() else Review(record.calc_id)
+    if old.calc != record.calc_id:
+        raise UserError(f"{path}: is of calc {old.calc[:40]!r}, not of {record.calc_id!r}")
+    initials = "".join(word[0] for word in name.split())
+    at = dt.datetime.now(dt.UTC).strftime("%Y-%m-%dT%H:%M:%SZ")
+    made = with_findings(old, audit, record, Reviewer(name, initials), at)
+    refuse_originators(made, record)
+    return made

@@ -34,7 +34,7 @@ def run(options: argparse.Namespace) -> int:
     made = _merged(files)
     review = made.review
     record = _record_of(review, records, options.calc)
-    _refuse(review, record)
+    refuse_originators(review, record)
     if options.sign:
         review = sign(review, record, options.sign, options.on or _today())
     if options.merge or options.sign:
@@ -60,13 +60,13 @@ def review_beside(calc: Path, record: Record) -> Review | None:
     path = beside(calc)
     if not path.is_file():
         return None
-    review = _read(path)
+    review = read_file(path)
     if review.calc != record.calc_id:
         raise UserError(
             f"{path}: the review is of calc {review.calc[:40]!r}, not of {record.calc_id!r}; move "
             "it away, or put the right one there"
         )
-    _refuse(review, record)
+    refuse_originators(review, record)
     return review
 
 
@@ -90,7 +90,7 @@ def _merged(files: Sequence[Path]) -> Merged:
     faults, reviews = FaultList(), []
     for path in files:
         try:
-            reviews.append(_read(path))
+            reviews.append(read_file(path))
         except UserError as error:
             faults.take(error)
     faults.raise_if_any()
@@ -103,7 +103,8 @@ def _merged(files: Sequence[Path]) -> Merged:
     return reduce(join, reviews[1:], Merged(first, conflicts(first)))
 
 
-def _read(path: Path) -> Review:
+def read_file(path: Path) -> Review:
+    """Read a review from its file; raises :class:`UserError` that names the file."""
     from lineproof.audit.review_read import read_review  # noqa: PLC0415 - as in run
 
     try:
@@ -135,7 +136,8 @@ def _record_of(review: Review, records: Sequence[Record], path: Path) -> Record:
     raise UserError(f"{path}: holds {held}, but the review is of calc {review.calc[:40]!r}")
 
 
-def _refuse(review: Review, record: Record) -> None:
+def refuse_originators(review: Review, record: Record) -> None:
+    """Refuse a review by who made the calculation; raises :class:`UserError`."""
     from lineproof.audit.review_marks import refused_reviewers  # noqa: PLC0415 - as in run
 
     faults = refused_reviewers(review, record)
