@@ -89,15 +89,41 @@ def is_beyond(
     """Tell whether a slip moves its line beyond rounding.
 
     The claim cannot follow from the claims it rests on. Among many slips on a sheet, one does not
-    count there whose line by chance comes back to its right value, nor one in a part where others
-    turned a decision, so that other formulas apply.
+    count there whose line by chance follows with some of the wrong claims above it put right, nor
+    one in a part where others turned a decision, so that other formulas apply.
     """
     node, written = graph[slip.id], claims[slip.id].stands_for
     if reach(node, claims).meets(written):
         return False
-    right = claims_of(graph, graph.stored, [node.id, *node.args.values()])
-    by_chance = reach(node, right).meets(written) and not slip.inputs
-    return not by_chance and not _turned(graph, node.part, values)
+    if not slip.inputs and any(
+        reach(node, mixed).meets(written) for mixed in _put_right(graph, node, claims)
+    ):
+        return False
+    return not _turned(graph, node.part, values)
+
+
+def _put_right(
+    graph: Graph, node: Node, claims: Mapping[str, Claim]
+) -> Iterator[Mapping[str, Claim]]:
+    """Give the claims that a line rests on with some of the wrong ones put right, or all.
+
+    One put right is as coarse as it was written.
+    """
+    right = {i: graph.stored[i] for i in node.args.values()}
+    wrong = [i for i, value in right.items() if not claims[i].stands_for.holds(value)]
+    for chosen_ones in product([False, True], repeat=len(wrong)):
+        put = {
+            i: _as_coarse(claims[i], right[i])
+            for i, yes in zip(wrong, chosen_ones, strict=True)
+            if yes
+        }
+        if put:
+            yield dict(claims) | put
+
+
+def _as_coarse(written: Claim, value: float) -> Claim:
+    half = written.stands_for.half
+    return replace(written, value=value, stands_for=Interval(value - half, value + half))
 
 
 def _turned(graph: Graph, part: str, values: Mapping[str, float]) -> bool:
