@@ -99,7 +99,8 @@ _FIRST_NUMBERS = re.compile(_NUMBER)
 _FIGURE_PLACE = re.compile(rb"(?<=q )(%b %b %b %b %b) (%b) (?=cm)" % ((_NUMBER,) * 6))
 _PLACE_IN_FILE = re.compile(rb"/MCID \d+")
 _ESCAPE = re.compile(rb"\\(?:([0-7]{1,3})|(\r\n|.))", re.DOTALL)
-_ESCAPED = {b"n": b"\n", b"r": b"\r", b"t": b"\t", b"b": b"\b", b"f": b"\f", b"\n": b"", b"\r": b""}
+_ESCAPED = {b"n": b"\n", b"r": b"\r", b"t": b"\t", b"b": b"\b", b"f": b"\f", b"\n": b"", b"\r": b"",
+            b"\r\n": b""}  # fmt: skip
 _CONTENTS_NUMBER = b"BT/Span<</ActualText<FEFF00202060>>>BDC"
 _SEE_PAGE = re.compile(r"see page (\d+)\Z")
 _PAGE_OF = re.compile(r"Page (\d+) of (\d+)\Z")
@@ -111,8 +112,8 @@ SHORT_RULE = 60.0
 def string_bytes(literal: bytes) -> bytes:
     r"""Return the bytes of a string as a page writes it, in parentheses or as digits.
 
-    >>> string_bytes(rb"(a\\(\\051\\n)")
-    b'a()\n'
+    >>> string_bytes(rb"(a\(\051\n)"), string_bytes(b"<6128>")
+    (b'a()\n', b'a(')
     """
     if literal.startswith(b"<"):
         digits = literal[1:-1].decode("ascii")
@@ -125,7 +126,7 @@ def string_bytes(literal: bytes) -> bytes:
 def _unescaped(found: re.Match[bytes]) -> bytes:
     if found[1]:
         return bytes([int(found[1], 8) & 0xFF])
-    return _ESCAPED.get(found[2], found[2].strip(b"\r\n") if found[2] == b"\r\n" else found[2])
+    return _ESCAPED.get(found[2], found[2])
 
 
 @dataclass
