@@ -51,6 +51,8 @@ PARTS: dict[str, tuple[Mapping[str, str], Mapping[str, str]]] = {
     }),
 }  # fmt: skip
 
+IN_METRES = ("metres", "M_o = w_f*l_2**2/8")
+"""Part and line that a hand works in kN and m."""
 EMPIRICAL = ("0.2", "1.0")
 """Constants before the root of a stress: they carry its unit."""
 
@@ -71,6 +73,8 @@ def beam() -> Graph:
                 sheet.line(
                     formula(text, unit=unit, numbers=numbers, title=f"line of {text.split()[0]}")
                 )
+    with sheet.part(IN_METRES[0], "Worked in kN and m"):
+        sheet.line(formula(IN_METRES[1], unit="kN.m", system="kN-m", title="line of M_o"))
     return Graph(sheet.close())
 
 

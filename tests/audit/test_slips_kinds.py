@@ -38,6 +38,8 @@ CASES = [
     ("other quantity", "shear-1-left/V_s", V_S / 2, "A_v"),
     ("root or square forgotten", "shear-1-left/V_c", V_C * math.sqrt(30), "root of f_c"),
     ("root or square forgotten", "sag-1/I_g", 350 * 600**2 / 12, "h"),
+    ("root or square forgotten", "metres/M_o", W_F * 6 / 8, "power 1 of l_2"),
+    ("factor doubled", "metres/M_o", W_F**2 * 6**2 / 8, "w_f"),
     ("sign", "sag-1/d", 600 + 40 - 11.3 - 25.2 / 2, "c_c"),
     ("sign", "hog-2-left/M_f", -300 + 180 * 0.2 - W_F * 0.2**2 / 2, "sign"),
     ("unit factor", "sag-1/M_f", (V_SN**2 / W_F - V_SN**2 / (2 * W_F)) * 1e3, "N.m"),

@@ -18,6 +18,8 @@ from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 TOP = (0,)
 """The place of the result."""
 LOAD_FACTORS = ("1.25", "1.5", "1.4", "0.9")
+IN_METRES = {"mm": 1e3, "mm2": 1e6, "mm4": 1e12, "N": 1e3, "N.mm": 1e6, "MPa": 1e-3}
+"""What one m, m2, m4, kN, kN.m and kPa are in internal units."""
 SUM, PRODUCT = ("+", "-"), ("*", "/")
 
 
@@ -56,6 +58,15 @@ class Line:
     def pair(self, at: int) -> tuple[float, float]:
         """Return value and half width at a place."""
         return self.places.values[at], self.places.halves[at]
+
+    def metre(self, tree: Tree) -> float:
+        """Return how many internal units one of a quantity is where a hand works in kN and m.
+
+        One for a line that is worked in N and mm. It matters where a slip breaks the units.
+        """
+        if not isinstance(tree, Name) or self.node.entry.get("system") != "kN-m":
+            return 1.0
+        return IN_METRES.get(self.scope.units.get(self.node.args.get(tree.id, ""), ""), 1.0)
 
     def named(self, name: str) -> str:
         """Return a quantity of the formula in words: its name, label and title."""
@@ -144,6 +155,10 @@ def _factor(
     yield edit(family, value / size, "{} left out")
     if family not in ("load factor", "diameter"):
         yield edit(f"{family} twice", value * size, "{} taken twice")
+    metre = line.metre(line.places.places[factor].tree)
+    if metre != 1.0:
+        yield edit(family, value / size * metre, "{} left out, the rest worked in kN and m")
+        yield edit(f"{family} twice", value * size / metre, "{} taken twice, worked in kN and m")
     yield edit("inverted", value / size**2, "{} on the other side of the fraction bar")
 
 
@@ -242,11 +257,13 @@ def _power(line: Line, at: int, place: Place) -> Iterator[Edit]:
     for other in others:
         if math.isclose(other, exponent) or base < 0:
             continue
-        value = base**other
-        spread = abs(other * value / base) * half if base else half
         family = "root" if other in (usual, 1.0) else "power"
         said = partial("the power {:.3g} of {} in place of {:.3g}".format, other, text, exponent)
-        yield Edit(family, (at,), value, spread, said)
+        metre = line.metre(line.places.places[place.below[0]].tree)
+        for unit in dict.fromkeys((metre, 1.0)):
+            value = base**other * unit ** (exponent - other)
+            spread = abs(other * value / base) * half if base else half
+            yield Edit(family, (at,), value, spread, said)
 
 
 def _call(line: Line, at: int, place: Place) -> Iterator[Edit]:

@@ -74,7 +74,8 @@ FAMILIES: dict[str, Family] = {
     "decimal": Family("decimal point", 0.3),
     "swapped": Family("transposed digits", 0.5),
     "mistyped": Family("mistyped digit", 0.6),
-    "mistyped argument": Family("mistyped digit", 0.15),
+    "mistyped argument": Family("mistyped digit", 0.2),
+    "swapped argument": Family("transposed digits", 0.15),
     "swapped result": Family("transposed digits", 0.4),
     "mistyped result": Family("mistyped digit", 0.2),
 }

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterator
 from functools import partial
+from itertools import islice
 
 from lineproof.audit.slip_constants import BARS, BY_SYMBOL, GRADES, ROWS
 from lineproof.audit.slip_digits import changed, swapped, written
@@ -21,6 +22,8 @@ FACTORED = tuple(
     for factor in (1.25, 1.5, 1.4)
 )
 """Load factors, and how it is said that one was used or taken out."""
+FIRST_DIGITS = 27
+"""So many changes of digits are tried: nine for each of the first three."""
 LARGEST_STRAIN = 0.05
 """A bare number below it may be a strain, of which the power of ten is easily lost."""
 
@@ -180,13 +183,13 @@ def _digits(line: Line, target: str, name: str) -> Iterator[Other]:
         number, families = written(str(node.entry.get("typed", ""))), ("swapped", "mistyped")
     else:
         number = written(str(node.entry["printed"].get("result", "")))
-        families = ("mistyped argument", "mistyped argument")
+        families = ("swapped argument", "mistyped argument")
     value = line.pairs[target][0]
     if not number or not float(number) or UNITS[node.unit].kind == "angle":
         return
-    # Only what was typed by hand is searched for one changed digit; the rest would fit by chance.
-    for family, ways in zip(families, (swapped, changed)[: 1 + (node.kind == GIVEN)], strict=False):
-        for typed in ways(number):
+    for family, ways in zip(families, (swapped, changed), strict=True):
+        # The first digits are those that a hand copies; further ones would only fit by chance.
+        for typed in islice(ways(number), FIRST_DIGITS):
             new = value * float(typed) / float(number)
             said = partial(_mistyped, line, target, name, typed, number)
             yield Other(family, new, 0.0, said)
