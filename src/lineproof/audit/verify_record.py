@@ -14,6 +14,7 @@ from lineproof.package import Package, PrintError, build_package
 from lineproof.package.facts import PAPERS
 from lineproof.package.model import Walk
 from lineproof.record import Record, recompute
+from lineproof.record.seal import SEAL, seal_of
 
 _NAMED_APART = ("id", "digest", "label")
 
@@ -36,7 +37,12 @@ def altered_records(records: Iterable[Record]) -> list[Alteration]:
     import lineproof.beams  # noqa: PLC0415 - to recompute only
     import lineproof.standards.catalogue  # noqa: F401, PLC0415 - 0.1 s, to recompute only
 
-    return [
+    return [alteration for record in records for alteration in _altered(record)]
+
+
+def _altered(record: Record) -> list[Alteration]:
+    """Return what does not follow in a record; its broken seal, if nothing else shows why."""
+    found = [
         Alteration(
             where=Where.RECORD,
             what=f"{found.what} of the record does not follow from it",
@@ -46,8 +52,14 @@ def altered_records(records: Iterable[Record]) -> list[Alteration]:
             recorded=found.recomputed,
             found=found.stored,
         )
-        for record in records
         for found in recompute(record)
+    ]
+    sealed = seal_of(record.data)
+    if found or sealed == record.data[SEAL]:
+        return found
+    what = "the record was changed after it was closed, in what no line follows from"
+    return [
+        Alteration(Where.RECORD, what, record.calc_id, recorded=record.data[SEAL], found=sealed)
     ]
 
 

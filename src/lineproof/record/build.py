@@ -24,6 +24,7 @@ from lineproof.record.entry import (
     digest_of,
 )
 from lineproof.record.printing import Printer, utilisation
+from lineproof.record.seal import SEAL, seal_of
 
 SCHEMA = 1
 EARLIER_EDITION = "an earlier edition"
@@ -48,7 +49,7 @@ def build(
     made = [builder.part(part, str(n)) for n, part in enumerate(parts, 1)]
     entries = [entry for part in made for entry in part["entries"]]
     confirm = _to_confirm(entries, project, codes)
-    return {
+    data = {
         "schema": SCHEMA,
         "calc": dict(calc),
         "kind_of_member": member,
@@ -64,6 +65,7 @@ def build(
         },
         "digest": record_digest(calc["id"], codes, entries),
     }
+    return data | {SEAL: seal_of(data)}
 
 
 def record_digest(

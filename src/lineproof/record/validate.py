@@ -58,7 +58,7 @@ def check_record(data: Data) -> None:
     check_plain(data)
     need(
         data, "record", calc=dict, kind_of_member=str, project=dict, codes=dict, notation=list,
-        parts=list, confirm=list, status=dict, digest=str,
+        parts=list, confirm=list, status=dict, digest=str, seal=str,
     )  # fmt: skip
     need(data["calc"], "calc", id=str, title=str)
     faults = FaultList()
