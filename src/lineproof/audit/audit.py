@@ -12,7 +12,7 @@ from lineproof.audit.graph import Graph
 from lineproof.audit.judge import judge
 from lineproof.audit.junior import audit_record
 from lineproof.audit.missing import missing_checks
-from lineproof.audit.slips import find_slips
+from lineproof.audit.slips import searching
 from lineproof.audit.traps import trap_findings
 from lineproof.record import Record
 
@@ -31,7 +31,7 @@ def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = 
     """
     graph = graph or Graph(record)
     with np.errstate(all="ignore"):  # absurd claims lead procedures to infinities: no value
-        judged = judge(graph, claims, find_slips)
+        judged = judge(graph, claims, searching())
         return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged))
 
 

@@ -61,40 +61,64 @@ def likely(fit: Fit, claim: Claim) -> float:
 
 
 def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
-    """Return the slips, the most plausible first; the same value found twice is told once."""
+    """Return the slips, the most plausible first.
+
+    A value found by several kinds is told once, with the words of the two likeliest.
+    """
     ordered = sorted(
         ((likely(fit, claim), order, fit) for order, fit in enumerate(fits)),
         key=lambda row: (-row[0], row[1]),
     )
-    groups: list[tuple[float, Fit, list[str]]] = []
+    groups: list[Group] = []
     for share, _, fit in ordered:
         kind = FAMILIES[fit.edit.family].kind
-        same = next((kinds for _, other, kinds in groups if _equal(other.value, fit.value)), None)
+        same = next((group for group in groups if _equal(group.value, fit.value)), None)
         if same is None:
-            groups.append((share, fit, [kind]))
-        elif kind not in same:
-            same.append(kind)
+            groups.append(Group(share, {kind: fit}))
+        else:
+            same.fits.setdefault(kind, fit)
     return tuple(
-        Slip(kinds[0], _sentence(fit, claim), fit.value, share, tuple(kinds[1:]))
-        for share, fit, kinds in _varied(groups)[:MOST]
-        if share >= LEAST_LIKELY
+        _slip(group, claim) for group in _varied(groups)[:MOST] if group.share >= LEAST_LIKELY
     )
 
 
-def _varied(groups: list[tuple[float, Fit, list[str]]]) -> list[tuple[float, Fit, list[str]]]:
+def _slip(group: Group, claim: Claim) -> Slip:
+    kind, *others = group.fits
+    return Slip(kind, _sentence(group, claim), group.value, group.share, tuple(others))
+
+
+class Group(NamedTuple):
+    """Fits of one value, one of each kind, the likeliest first, with the share of that one."""
+
+    share: float
+    fits: dict[str, Fit]
+
+    @property
+    def value(self) -> float:
+        """The value at the claim."""
+        return next(iter(self.fits.values())).value
+
+
+def _varied(groups: list[Group]) -> list[Group]:
     """Order slips so that many of one kind, nearly alike, do not push out the other kinds."""
     met: Counter[str] = Counter()
     weighed = []
-    for share, fit, kinds in groups:
-        weighed.append((share * AGAIN ** met[kinds[0]], fit, kinds))
-        met[kinds[0]] += 1
-    return sorted(weighed, key=lambda row: -row[0])
+    for group in groups:
+        kind = next(iter(group.fits))
+        weighed.append(group._replace(share=group.share * AGAIN ** met[kind]))
+        met[kind] += 1
+    return sorted(weighed, key=lambda group: -group.share)
 
 
 def _equal(first: float, second: float) -> bool:
     return abs(first - second) <= _SAME * max(abs(first), abs(second))
 
 
-def _sentence(fit: Fit, claim: Claim) -> str:
+def _sentence(group: Group, claim: Claim) -> str:
+    """Say what gives the claimed value, and the other cause of the same value that is likeliest."""
+    fit, *others = group.fits.values()
     how = "exactly" if claim.stands_for.holds(fit.value) else "within the digits of its arguments"
-    return f"Reproduced {how} with {fit.edit.words()}{fit.where}."
+    said = f"Reproduced {how} with {fit.edit.words()}{fit.where}."
+    if others:
+        said += f" The same value comes with {others[0].edit.words()}{others[0].where}."
+    return said
