@@ -69,3 +69,9 @@ def test_the_calc_prints_these_findings() -> None:
         for entry in part["entries"] if entry["kind"] == "note" and entry["title"]
     ]  # fmt: skip
     assert [head.partition(",")[0] for head in heads] == [f"Finding {n}" for n in range(1, 10)]
+
+
+def test_a_second_path_is_no_effect() -> None:
+    """The depth of the block claimed with the web makes the proof of M_r fail: not of the beam."""
+    finding = next(f for f in _audit().findings if "sag-1/a" in f.ids)
+    assert {effect.check for effect in finding.effects} == {"sag-1/yield", "sag-1/strength"}

@@ -47,8 +47,8 @@ def effects_of(
     ``changed`` holds values by id in internal units, as they were claimed (or drawn). An effect
     keeps both numbers: ``claimed`` with these values, everything below them worked again, and
     ``right`` as recorded. A check stands here if its truth differs or its utilisation by more
-    than :data:`UNSEEN`. Checks that turn to fail come first, then those that turn to hold, then
-    the rest by their change of utilisation.
+    than :data:`UNSEEN`; one that only proves the calc by a second path does not. Checks that turn
+    to fail come first, then those that turn to hold, then the rest by their change of utilisation.
     """
     return _effects(graph, changed, told, recorded_is_right=True)
 
@@ -67,6 +67,8 @@ def _effects(
     worked, titles = graph.worked(changed), _titles(graph)
     found = []
     for node in graph.checks():
+        if node.entry.get("proof"):  # says that two ways of the calc agree, nothing of the beam
+            continue
         if node.id not in worked.truths and node.id not in worked.failed:
             continue
         other, recorded = worked.truths.get(node.id), graph.truth(node.id)

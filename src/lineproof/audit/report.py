@@ -12,6 +12,7 @@ from itertools import groupby
 from typing import Any
 
 from lineproof.audit.data import Audit, Effect, Finding, Interval, Judged, Severity, Verdict
+from lineproof.audit.drawing import SOURCE as DRAWING
 from lineproof.audit.findings import named_clause
 from lineproof.audit.graph import Graph, Node
 from lineproof.package import Package, build_package, to_html, to_pdf
@@ -38,6 +39,7 @@ _KEPT = ("project", "codes", "building", "paper")
 _JUDGED = ["Line", "Quantity", "Claimed", "Follows from the claims", "Right", "Verdict"]
 _JUDGED_WIDTHS = (12, 50, 20, 31, 20, 21)
 _EFFECTS = ["Line", "Check", "Where", "As claimed", "Right", "When put right"]
+_EFFECTS_DRAWN = ["Line", "Check", "Where", "As drawn", "In the calc", "When put right"]
 _EFFECT_WIDTHS = (12, 46, 42, 18, 16, 20)
 _NO_CLAIMS = (
     "The record was searched by itself: its lines worked again, its formulas compared with the "
@@ -172,7 +174,8 @@ class Report:
             more = len(finding.effects) - MOST_EFFECTS
             title = f"What finding {number} does to the checks that rest on it"
             title += f", the first {MOST_EFFECTS} of {len(finding.effects)}" if more > 0 else ""
-            sheet.table(f"effects-{number}", _EFFECTS, rows, title=title, widths=_EFFECT_WIDTHS)
+            columns = _EFFECTS_DRAWN if finding.source == DRAWING else _EFFECTS
+            sheet.table(f"effects-{number}", columns, rows, title=title, widths=_EFFECT_WIDTHS)
 
     def _lines(self, ids: Sequence[str]) -> str:
         labels = [label for each in ids if (label := self._label(each))]
