@@ -23,6 +23,7 @@ from lineproof.record.entry import (
     Part,
     digest_of,
 )
+from lineproof.record.plain_data import check_plain
 from lineproof.record.printing import Printer, utilisation
 from lineproof.record.seal import SEAL, seal_of
 
@@ -65,6 +66,7 @@ def build(
         },
         "digest": record_digest(calc["id"], codes, entries),
     }
+    check_plain(data)
     return data | {SEAL: seal_of(data)}
 
 
