@@ -53,6 +53,11 @@ def test_a_claim_stands_for_half_a_unit_of_its_last_digit(graph: Graph, tmp_path
     assert (second.stands_for.low, second.stands_for.high) == pytest.approx((538.5, 539.5))
 
 
+def test_a_claim_keeps_its_place_in_the_others_calculation(graph: Graph, tmp_path: Path) -> None:
+    first, second = read(graph, tmp_path, "id,claimed,where\nbeam/d,539 mm,p.  3\nbeam/a,65 mm,\n")
+    assert (first.where, second.where) == ("p. 3", "")
+
+
 @pytest.mark.parametrize(
     ("typed", "unit", "value"),
     [

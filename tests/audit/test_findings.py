@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from dataclasses import replace
 
 import pytest
 from tests.audit import hand
@@ -74,3 +75,28 @@ def test_a_line_not_changed_with_its_input_says_so() -> None:
 def test_a_slip_of_units_is_told_as_one() -> None:
     (finding,) = found(beam(), {"strength/M_f": "180 N.mm"})
     assert "180 N.mm claimed; reproduced exactly with N.mm in place of kN.m" in finding.what
+
+
+def test_a_finding_names_the_page_of_the_others_calculation() -> None:
+    """M_r with h for d: 408 000 x (600 - 32.489) = 231.54 kN.m."""
+    graph = Graph(beam())
+    claim = replace(typed(graph, "strength/M_r", "231.5"), where="p. 3")
+    (finding,) = audit_claims(graph.record, [claim], graph).findings
+    assert ": 231.5 kN.m (p. 3) does not follow from" in finding.what
+
+
+def test_a_finding_that_changes_no_check_says_so() -> None:
+    """Nothing rests on h_f; M_f is compared with M_r."""
+    said = {f.ids[0]: f.advice for f in found(beam(), {"given/h_f": "120 mm", "beam/d": "540"})}
+    assert said["given/h_f"].endswith(" No check of the calc changes by it.")
+    assert "No check" not in said["beam/d"]
+
+
+def test_lambda_is_written_without_the_underscore_of_its_formula() -> None:
+    """lambda_ 0.75 left out of 10 x 0.75: the claim is 10."""
+    sheet = hand.sheet_of({}, {"k": "10 mm", "lambda_": "0.75"})
+    with sheet.part("work", "Span 1: by hand"):
+        sheet.line("x = k*lambda_", unit="mm")
+    (finding,) = found(sheet.close(), {"work/x": "10.0"})
+    assert "lambda (1.2" in finding.advice
+    assert "lambda_" not in finding.advice

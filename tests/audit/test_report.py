@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import csv
 import io
+from dataclasses import replace
 
 import pytest
 from tests.audit.hand import beam, typed
@@ -81,6 +82,18 @@ def test_judged_lines_show_claim_what_follows_what_is_right_and_verdict(audit: A
     low, high = rows[1][3].removesuffix(" kN·m").split(" to ")
     assert 205.7 < float(low) < 206.0
     assert 207.2 < float(high) < 207.5
+
+
+def test_an_exact_input_is_shown_as_such_and_a_claim_with_its_page() -> None:
+    """n_b is 4, not 4.000; the depth is 600 mm."""
+    record = beam()
+    graph = Graph(record)
+    claims = [typed(graph, "given/h", "600"), typed(graph, "given/n_b", "4")]
+    claims[0] = replace(claims[0], where="p. 3")
+    made = Audit("H1", record.digest, judge(graph, claims, find_slips), ())
+    judged = next(p for p in report_record(made, record).parts if p["key"] == "judged")
+    shown = [row[2:5] for row in judged["entries"][0]["rows"]]
+    assert shown == [["600 mm (p. 3)", "600 mm", "600 mm"], ["4", "4", "4"]]
 
 
 def test_every_line_that_was_not_claimed_is_named(audit: Audit) -> None:

@@ -276,6 +276,20 @@ def test_the_keyboard_steps_line_by_line_and_marks(opened: Open) -> None:
     assert page.get_by_text("2 of 11 lines marked").is_visible()
 
 
+def test_mark_and_trace_of_a_low_line_stand_below_each_other(opened: Open) -> None:
+    """A given is one line of text high: two texts, each at its own place, would overprint."""
+    page = opened()
+    row(page, "data/h").locator(".result").click()
+    page.keyboard.press("a")
+    before, after = page.evaluate(
+        "['::before', '::after'].map(p => {"
+        "const s = getComputedStyle(document.getElementById('data/h'), p);"
+        "return [s.content, s.display, s.whiteSpace]})"
+    )
+    assert (before[0], before[2]) == ('"✓ accepted\\a here"', "pre-line")
+    assert after[1] == "none"
+
+
 def test_keys_do_nothing_while_one_types_or_when_they_are_off(opened: Open) -> None:
     page = opened()
     row(page, "span-1/d").locator(".result").click()

@@ -318,3 +318,31 @@ def test_findings_are_raised_in_a_review_once(
     assert audit(record_file, "--claims", file, *checked) == 2
     assert "is of calc 'H9', not of 'H1'" in capsys.readouterr().err
     assert review.read_bytes() == before
+
+
+@pytest.mark.parametrize(
+    ("table", "said"),
+    [
+        ("id,claimed\nbeam/d,539 mm\n",
+         "row 1: no heading 'item', 'place', 'drawn'; --blank-drawing writes the table"),
+        ("item,place,drawn\noverall depth,the beam,\n",
+         "no row has a value in the column 'drawn'; write one"),
+    ],
+)  # fmt: skip
+def test_a_table_of_something_else_is_no_drawing(
+    record_file: Path, tmp_path: Path, capsys: Capture, table: str, said: str
+) -> None:
+    """Taken for a drawing it would show nothing of the beam, each of its items a finding."""
+    file = tmp_path / "other.csv"
+    file.write_text(table, encoding="utf-8")
+    assert audit(record_file, "--drawing", file) == 2
+    captured = capsys.readouterr()
+    assert (captured.out, captured.err) == ("", f"{file}: {said}\n")
+
+
+def test_a_name_or_a_day_that_goes_nowhere_is_refused(record_file: Path, capsys: Capture) -> None:
+    assert audit(record_file, "--checker", "K. Mori", "--date", "tomorrow") == 2
+    assert capsys.readouterr().err.splitlines() == [
+        "--date is the day of a printed report; give --into DIR with it",
+        "--checker stands in a report or a review; give --into DIR or --review FILE with it",
+    ]

@@ -23,6 +23,7 @@ _BARE = re.compile(r"[+-]?[\d.,' ]+(?:[eE][+-]?\d+)?\Z")
 _GROUPED = re.compile(r"[+-]?\d{1,3}(?:[ ,']\d{3})+(?:\.\d*)?(?![\d,' ]*\d)")
 """Digits in groups of three: 12 300 or 12,300."""
 _MOST_PLACES = 6
+_LONGEST_WHERE = 40
 
 
 def read_claims(graph: Graph, path: Path) -> tuple[Claim, ...]:
@@ -174,7 +175,8 @@ class _Reader:
             self.faults.at(row.number, "claimed", error.faults[0])
             return None
         stands_for = read_from(read.number).times(internal_factor(read.unit))
-        return Claim(node.id, read.number, read.unit, read.value, stands_for, row.number)
+        where = " ".join(row.cells.get("where", "").split())[:_LONGEST_WHERE]
+        return Claim(node.id, read.number, read.unit, read.value, stands_for, row.number, where)
 
 
 def _words(text: str) -> list[str]:

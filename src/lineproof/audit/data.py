@@ -64,7 +64,8 @@ def read_from(text: str) -> Interval:
 class Claim:
     """A value that somebody else wrote for a line: as typed, and what it stands for.
 
-    ``row`` is its row in the table that it came from, counted as the spreadsheet shows it.
+    ``row`` is its row in the table that it came from, counted as the spreadsheet shows it;
+    ``where`` is its place in the other's calculation as the table says: ``p. 3``.
     """
 
     id: str
@@ -73,6 +74,7 @@ class Claim:
     value: float
     stands_for: Interval
     row: int = 0
+    where: str = ""
 
 
 class Verdict(StrEnum):

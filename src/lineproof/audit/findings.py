@@ -3,22 +3,21 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 
 from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdict
 from lineproof.audit.effects import effects_of, named_line
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips import none_fits
-from lineproof.quantity.digits import rounded_text
-from lineproof.quantity.units import internal_factor
 
 SOURCE = "claims"
 FOUND = (
     Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN,
 )  # fmt: skip
 """Verdicts that a checker writes down; what a line carries is told at its origin."""
-_DIGITS = 4
 _MOST_EFFECTS = 300
 """So many findings get their effects; more of them say that the claims are of another beam."""
+_NO_CHECK = "No check of the calc changes by it."
 _ORDER = list(Severity)
 
 
@@ -30,9 +29,12 @@ def findings_of(graph: Graph, judged: Sequence[Judged]) -> tuple[Finding, ...]:
         if each.claim is None or each.verdict not in FOUND:
             continue
         effects: tuple[Effect, ...] = ()
+        advice = _advice(graph, each)
         if len(found) < _MOST_EFFECTS:
             effects = effects_of(graph, {each.id: each.claim.value})
-        found.append(_finding(graph, each, each.claim, effects, carried.get(each.id, [])))
+            advice = advice if effects else f"{advice} {_NO_CHECK}".lstrip()
+        made = _finding(graph, each, each.claim, effects, carried.get(each.id, []))
+        found.append(replace(made, advice=advice))
     return tuple(sorted(found, key=importance))
 
 
@@ -73,7 +75,7 @@ def _finding(
         what += f"; {_count(len(carried), 'claimed line carries', 'claimed lines carry')} it"
     return Finding(
         SOURCE, _severity(judged, effects), what, (judged.id, *carried),
-        str(node.entry.get("clause", "")), _advice(graph, judged), effects,
+        str(node.entry.get("clause", "")), effects=effects,
     )  # fmt: skip
 
 
@@ -113,11 +115,11 @@ def _advice(graph: Graph, judged: Judged) -> str:
 
 def _words(node: Node, judged: Judged, claim: Claim) -> str:
     if judged.verdict is Verdict.UNSAFE_ROUNDING:
-        return f"{as_typed(claim)} is {judged.note}"
+        return f"{cited(claim)} is {judged.note}"
     if judged.verdict is not Verdict.ORIGIN:
-        return f"{as_typed(claim)} claimed; {judged.note}"
+        return f"{cited(claim)} claimed; {judged.note}"
     follows, right = shown(node, judged.follows.middle), shown(node, judged.right)
-    said = f"{as_typed(claim)} does not follow from the values that the claim uses; {follows} does"
+    said = f"{cited(claim)} does not follow from the values that the claim uses; {follows} does"
     said = said if follows == right else f"{said}, and {right} is right"
     return f"{said}; it {judged.note}" if judged.note else said
 
@@ -127,6 +129,11 @@ def as_typed(claim: Claim) -> str:
     return f"{claim.typed} {claim.unit}".rstrip()
 
 
+def cited(claim: Claim) -> str:
+    """Return a claimed number with its unit and, if told, its place in the other's calculation."""
+    return f"{as_typed(claim)} ({claim.where})" if claim.where else as_typed(claim)
+
+
 def shown(node: Node, value: float) -> str:
     """Return a value of a line in its printed unit, to four digits."""
-    return f"{rounded_text(value / internal_factor(node.unit), _DIGITS)} {node.unit}".rstrip()
+    return f"{node.number_text(value)} {node.unit}".rstrip()

@@ -11,6 +11,7 @@ from typing import Any
 from lineproof.errors import UserError
 from lineproof.formula import Tree, names_of, parse_criterion, parse_line
 from lineproof.formula.compiled import COMPARE, weave_tree
+from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
 from lineproof.record.entry import CHECK, CRITERIA, FOUND, LINE, VALUES
@@ -71,6 +72,15 @@ class Node:
     def is_computed(self) -> bool:
         """Tell whether it follows from other lines."""
         return self.kind in (LINE, FOUND)
+
+    def number_text(self, value: Number, digits: int = 4) -> str:
+        """Return a value of the line as a number in its printed unit, rounded to some digits.
+
+        An input is exact: 4 bars and 380 mm, not 4.000 bars and 380.0 mm.
+        """
+        text = rounded_text(value / internal_factor(self.unit), digits)
+        exact = not self.is_computed and "." in text and "e" not in text.lower()
+        return text.rstrip("0").rstrip(".") if exact else text
 
     def compute(self, named: Mapping[str, Number]) -> Number:
         """Return its value from the values of its arguments, by the names in its formula.

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Container, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
@@ -14,8 +15,6 @@ from lineproof.audit.readings import Rounded, coarse_rounding, unit_slip
 from lineproof.audit.safe_side import is_safe
 from lineproof.audit.twins import twins_of
 from lineproof.audit.worlds import Worlds, unmoved_lines
-from lineproof.quantity.digits import rounded_text
-from lineproof.quantity.units import internal_factor
 from lineproof.record.entry import DECISION
 
 SlipFinder = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
@@ -39,6 +38,10 @@ def judge(
     the slip behind an origin.
     """
     return tuple(_Judge(graph, claims, find).all())
+
+
+_LAMBDA = re.compile(r"\blambda_(?!\w)")
+"""The name of lambda in formulas, which are read as Python; a checker writes no underscore."""
 
 
 class _Judge:
@@ -216,7 +219,8 @@ class _Judge:
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         if self.find is None:
             return ()
-        return self.find(self.graph, node.id, self.used, claim, frozenset(self.claims))
+        slips = self.find(self.graph, node.id, self.used, claim, frozenset(self.claims))
+        return tuple(replace(slip, sentence=_LAMBDA.sub("lambda", slip.sentence)) for slip in slips)
 
     # -- what later lines carry ------------------------------------------------------------
 
@@ -253,5 +257,4 @@ class _Judge:
         return ", ".join(f"{self.graph[i].symbol} ({self.graph[i].label})" for i in ids)
 
     def _shown(self, node: Node, value: float, digits: int = _DIGITS) -> str:
-        number = value / internal_factor(node.unit)
-        return f"{rounded_text(number, digits)} {node.unit}".rstrip()
+        return f"{node.number_text(value, digits)} {node.unit}".rstrip()

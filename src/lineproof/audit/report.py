@@ -11,15 +11,13 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 from itertools import groupby
 from typing import Any
 
-from lineproof.audit.data import Audit, Effect, Finding, Interval, Judged, Severity, Verdict
+from lineproof.audit.data import Audit, Claim, Effect, Finding, Interval, Judged, Severity, Verdict
 from lineproof.audit.drawing import SOURCE as DRAWING
 from lineproof.audit.findings import named_clause
 from lineproof.audit.graph import Graph, Node
 from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
 from lineproof.package.words import AUDIT_REPORT
-from lineproof.quantity.digits import rounded_text
-from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
 from lineproof.sheet import Sheet
 from lineproof.typeset.values import number_text, unit_text
@@ -27,7 +25,6 @@ from lineproof.typeset.values import number_text, unit_text
 MOST_EFFECTS = 12
 MOST_SLIPS = 3
 _LONGEST_ID = 40
-_DIGITS = 4
 _THEN = {
     (True, True): "still holds",
     (True, False): "no longer holds",
@@ -268,22 +265,23 @@ def _judged_rows(judged: Iterable[Judged], graph: Graph) -> Iterator[list[str]]:
         name = _capital(node.title) or node.symbol
         yield [
             each.id, node.label, name,
-            "" if claim is None else _with_unit(claim.typed, claim.unit),
+            "" if claim is None else _claimed(claim),
             _interval(each.follows, node), _number(each.right, node), str(each.verdict),
         ]  # fmt: skip
 
 
 def _interval(interval: Interval, node: Node) -> str:
-    low, high = (_digits(value, node) for value in (interval.low, interval.high))
+    low, high = (node.number_text(value) for value in (interval.low, interval.high))
     return _with_unit(low if low == high else f"{low} to {high}", node.unit)
 
 
 def _number(value: float, node: Node) -> str:
-    return _with_unit(_digits(value, node), node.unit)
+    return _with_unit(node.number_text(value), node.unit)
 
 
-def _digits(value: float, node: Node) -> str:
-    return rounded_text(value / internal_factor(node.unit), _DIGITS)
+def _claimed(claim: Claim) -> str:
+    typed = _with_unit(claim.typed, claim.unit)
+    return f"{typed} ({claim.where})" if claim.where else typed
 
 
 def _with_unit(number: str, unit: str) -> str:

@@ -95,7 +95,8 @@ def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
         "audit",
         help="check claims of another calculation against a calc, or search a calc; runs nothing",
         description="With --claims: judge every value that somebody else claims, and name the "
-        "origin of each error, the likely slip, and what it does to the checks. Without: search "
+        "origin of each error, the likely slip, and what it does to the checks; the table is "
+        "the one that --blank writes, with the column 'claimed' filled in. Without: search "
         "the calc itself for wrong lines and for what is missing. Nothing in a file is run.",
     )
     audit.add_argument(

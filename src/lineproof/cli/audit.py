@@ -19,7 +19,7 @@ from lineproof.audit.tables import write_table
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.cli.files import write_all
 from lineproof.cli.review import read_file, refuse_originators
-from lineproof.errors import UserError
+from lineproof.errors import FaultList, UserError
 from lineproof.notebook.audited import audited, picked
 from lineproof.notebook.records import read_records
 from lineproof.record import Record
@@ -29,6 +29,7 @@ DONE, FOUND = 0, 1
 
 def run(options: argparse.Namespace) -> int:
     """Audit a calculation or write a blank table; returns 1 where there is a finding."""
+    _refuse_idle(options)
     record = picked(read_records(options.record), options.record, options.calc)
     if options.blank or options.blank_full or options.blank_drawing:
         _write_blank(record, options)
@@ -46,6 +47,18 @@ def run(options: argparse.Namespace) -> int:
     else:
         sys.stdout.writelines(f"{line}\n" for line in as_text(audit, graph))
     return FOUND if audit.findings else DONE
+
+
+def _refuse_idle(options: argparse.Namespace) -> None:
+    """Refuse a name or a day that would go nowhere."""
+    faults = FaultList()
+    if options.date and options.into is None:
+        faults.add("--date is the day of a printed report; give --into DIR with it")
+    if options.checker and options.into is None and options.review is None:
+        faults.add(
+            "--checker stands in a report or a review; give --into DIR or --review FILE with it"
+        )
+    faults.raise_if_any()
 
 
 def _write_blank(record: Record, options: argparse.Namespace) -> None:

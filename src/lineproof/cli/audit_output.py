@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from typing import Any
 
 from lineproof.audit.data import Audit, Effect, Finding, Judged, Severity, Slip, Verdict
-from lineproof.audit.findings import as_typed, shown
+from lineproof.audit.findings import as_typed, cited, shown
 from lineproof.audit.graph import Graph, Node
 from lineproof.quantity.units import internal_factor
 from lineproof.typeset import printable
@@ -85,7 +85,7 @@ def _remarks(audit: Audit, graph: Graph) -> Iterator[str]:
         yield "no errors"
     for judged in remarked:
         node = graph[judged.id]
-        claim = as_typed(judged.claim) if judged.claim is not None else ""
+        claim = cited(judged.claim) if judged.claim is not None else ""
         yield f"      {judged.id} ({node.label}): {claim} claimed; {judged.note}"
 
 
@@ -113,6 +113,7 @@ def _judged(judged: Judged, node: Node) -> dict[str, Any]:
         "verdict": str(judged.verdict),
         "claimed": as_typed(claim) if claim is not None else "",
         "row": claim.row if claim is not None else 0,
+        "where": claim.where if claim is not None else "",
         "unit": node.unit,
         "follows": [judged.follows.low / factor, judged.follows.high / factor],
         "right": judged.right / factor,

@@ -100,9 +100,17 @@ def picked(records: Sequence[Record], path: Path, calc: str | None) -> Record:
 
 
 def _of_drawing(path: Path, record: Record) -> tuple[Finding, ...]:
-    rows = read_table(path).rows
+    table = read_table(path)
+    lacking = [name for name in ("item", "place", "drawn") if name not in table.headings]
+    if lacking:
+        raise UserError(
+            f"{path}: row 1: no heading {', '.join(map(repr, lacking))}; --blank-drawing writes "
+            "the table"
+        )
+    if not any(row.cells.get("drawn") for row in table.rows):
+        raise UserError(f"{path}: no row has a value in the column 'drawn'; write one")
     try:
-        return drawing_findings(record, rows)
+        return drawing_findings(record, table.rows)
     except UserError as error:
         raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
 
