@@ -88,8 +88,8 @@ def _key_of_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int]:
 
 
 @st.composite
-def _random_beams(draw: st.DrawFn) -> dict[str, Any]:
-    count = draw(st.integers(1, 2))
+def _random_beams(draw: st.DrawFn, least: int = 1, most: int = 2) -> dict[str, Any]:
+    count = draw(st.integers(least, most))
     return {
         "spans": [f"{draw(st.integers(55, 95)) / 10} m" for _ in range(count)],
         "supports": ["column 400 mm"] * (count + 1),
@@ -99,7 +99,7 @@ def _random_beams(draw: st.DrawFn) -> dict[str, Any]:
     }
 
 
-@settings(max_examples=6, deadline=None)
+@settings(max_examples=25, deadline=None)
 @given(_random_beams())
 def test_no_bottom_bars_are_better(changes: dict[str, Any]) -> None:
     beam = analysed(**changes)
@@ -128,23 +128,36 @@ def _best_top(beam: beams.ContinuousBeam, support: int) -> dict[str, float]:
     return found
 
 
-def test_no_top_bars_are_better() -> None:
-    """Three spans: one size for all supports, least mass (a third of each span beside)."""
-    beam = analysed()
+def _tops_are_best(beam: beams.ContinuousBeam) -> None:
+    """One size for all supports, least mass (a third of each span beside), or a refusal."""
     model = beam.model
-    chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
-    lengths = {1: 7.6, 2: 7.6 + 9.2, 3: 9.2 + 7.6, 4: 7.6}
-    best = {support: _best_top(beam, support) for support in chosen}
-    totals = {
-        size: sum(best[j][size] * lengths[j] for j in chosen)
-        for size in SIZES
-        if all(size in best[j] for j in chosen)
+    spans = [length.value for length in model.lengths]
+    best = {
+        support: _best_top(beam, support)
+        for support in {f.support for f in faces_of(model) if hogging(model, f) > 0}
     }
-    mine = 0.0
-    for support, made in chosen.items():
-        assert isinstance(made.bars, TopBars)
-        mine += made.bars.area * lengths[support]
-    assert mine == pytest.approx(min(totals.values()))
-    assert (
-        len({made.bars.web.size for made in chosen.values() if isinstance(made.bars, TopBars)}) == 1
-    )
+    beside = {j: sum(spans[k] for k in (j - 2, j - 1) if 0 <= k < len(spans)) for j in best}
+    totals = [
+        sum(best[j][size] * beside[j] for j in best)
+        for size in SIZES
+        if all(size in made for made in best.values())
+    ]
+    if not totals:
+        with pytest.raises(UserError, match="top_bars"):
+            flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
+        return
+    chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
+    tops = {j: made.bars for j, made in chosen.items() if isinstance(made.bars, TopBars)}
+    assert set(tops) == set(best)
+    assert sum(bars.area * beside[j] for j, bars in tops.items()) == pytest.approx(min(totals))
+    assert len({bars.web.size for bars in tops.values()}) == 1
+
+
+def test_no_top_bars_are_better() -> None:
+    _tops_are_best(analysed())
+
+
+@settings(max_examples=25, deadline=None)
+@given(_random_beams(2, 3))
+def test_no_top_bars_of_random_beams_are_better(changes: dict[str, Any]) -> None:
+    _tops_are_best(analysed(**changes))
