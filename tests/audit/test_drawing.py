@@ -207,6 +207,8 @@ def test_two_revisions_of_one_drawing() -> None:
 
     assert first.what == "S-201 is told with revisions A, B."
     assert second.what == "The calc rests on revision B of S-201, the drawing is revision A."
+    # A revision is no critical finding: differences stand before it as well as after it.
+    assert second.advice == "Compare the two revisions before its other differences are judged."
 
 
 def test_units_of_the_drawing_may_be_others() -> None:

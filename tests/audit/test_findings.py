@@ -12,7 +12,11 @@ from tests.audit.hand import beam, typed
 from lineproof.audit.audit import audit_claims
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.graph import Graph
+from lineproof.audit.review import Review, Reviewer
+from lineproof.audit.review_findings import with_findings
 from lineproof.record import Record
+
+AT = "2026-12-01T15:05:33Z"
 
 
 def found(record: Record, claims: Mapping[str, str]) -> tuple[Finding, ...]:
@@ -49,6 +53,7 @@ def test_severity_goes_by_the_checks() -> None:
     cases = [
         (failing, {"beam/M_r": "300"}, Severity.CRITICAL),  # holds as claimed, fails when right
         (beam(), {"strength/M_f": "150"}, Severity.MAJOR),  # 150/206.6 hides 180/206.6
+        (beam(), {"strength/M_f": "178"}, Severity.MINOR),  # 178/206.6 = 0.861 hides 0.871
         (beam(), {"strength/M_f": "193"}, Severity.MINOR),  # asks for more than it needs
         (beam(), {"given/w_f": "45 kN/m"}, Severity.MINOR),  # the same by an input
         (beam(), {"given/h_f": "120 mm"}, Severity.OBSERVATION),  # nothing rests on it
@@ -100,3 +105,22 @@ def test_lambda_is_written_without_the_underscore_of_its_formula() -> None:
     (finding,) = found(sheet.close(), {"work/x": "10.0"})
     assert "lambda (1.2" in finding.advice
     assert "lambda_" not in finding.advice
+
+
+def test_a_line_without_a_title_is_named_by_its_symbol() -> None:
+    """Givens of the beam by hand have no title; w_f is the 14th of them."""
+    (finding,) = found(beam(), {"given/w_f": "45 kN/m"})
+    assert finding.what.startswith("w_f, given (1.14): 45 kN/m claimed")
+
+
+def test_a_finding_raised_in_a_review_starts_with_a_capital() -> None:
+    """Titles of inputs start small; in a list of findings each is a sentence of its own."""
+    sheet = hand.sheet_of({}, {})
+    with sheet.part("work", "Span 1: by hand"):
+        sheet.given("h", "600 mm", "overall depth")
+    record = sheet.close()
+    audit = audit_claims(record, [typed(Graph(record), "work/h", "650")])
+    made = with_findings(Review(record.calc_id), audit, record, Reviewer("Ana Bell", "AB"), AT)
+    assert [raised.text.partition(":")[0] for raised in made.findings] == [
+        "Overall depth, span 1 (3.1)"
+    ]

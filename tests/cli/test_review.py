@@ -107,8 +107,8 @@ def test_two_files_are_merged_and_the_conflict_is_told(
     told = capsys.readouterr().out
     assert told.startswith(f"{out}\n")
     assert (
-        "2.1 Effective depth: arithmetic checked by Kei Mori, arithmetic queried by Ines Ott"
-        in told
+        "  conflict: 2.1 Effective depth: arithmetic checked by Kei Mori, arithmetic queried by "
+        "Ines Ott\n" in told
     )
     merged = read_review(out.read_text(encoding="utf-8"))
     assert {mark.by for mark in merged.marks} == {"Kei Mori", "Ines Ott"}

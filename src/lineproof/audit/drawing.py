@@ -337,7 +337,7 @@ def _revisions(record: Record, rows: Iterable[Drawn]) -> Iterator[Finding]:
             yield _revision(
                 f"The calc rests on revision {told[drawing]} of {drawing}, the drawing is "
                 f"revision {revision}",
-                "Compare the two revisions before the differences below are judged.",
+                "Compare the two revisions before its other differences are judged.",
             )
 
 

@@ -117,7 +117,8 @@ def _titles(graph: Graph) -> dict[str, str]:
 
 def _name(node: Node, titles: Mapping[str, str]) -> str:
     label = f" ({node.label})" if node.label else ""
-    return f"{node.title}, {place_of(titles[node.part])}{label}"
+    name = node.title or str(node.entry.get("symbol", "")) or node.id
+    return f"{name}, {place_of(titles[node.part])}{label}"
 
 
 def _effect(

@@ -17,6 +17,8 @@ FOUND = (
 """Verdicts that a checker writes down; what a line carries is told at its origin."""
 _MOST_EFFECTS = 300
 """So many findings get their effects; more of them say that the claims are of another beam."""
+_SMALL = 0.02
+"""A check that the right value uses up more by so little is no major matter while it holds."""
 _NO_CHECK = "No check of the calc changes by it."
 _ORDER = list(Severity)
 
@@ -89,7 +91,7 @@ def _severity(judged: Judged, effects: Sequence[Effect]) -> Severity:
         return Severity.CRITICAL
     if judged.verdict in (Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN):
         return Severity.MINOR
-    if any((e.holds and not e.holds_as_claimed) or _change(e) > 0 for e in effects):
+    if any((e.holds and not e.holds_as_claimed) or _change(e) > _SMALL for e in effects):
         return Severity.MAJOR
     no_matter = judged.verdict is Verdict.INPUT and not effects
     return Severity.OBSERVATION if no_matter else Severity.MINOR

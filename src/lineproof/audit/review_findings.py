@@ -42,4 +42,5 @@ def _text(finding: Finding) -> str:
     """Return the sentences of a finding: what, the likely slip or what to do, what it matters."""
     effects = [effect.sentence for effect in finding.effects[:MOST_EFFECTS]]
     said = (finding.what, finding.advice, *effects, named_clause(finding.clause))
-    return " ".join(f"{text.strip().rstrip('.')}." for text in said if text.strip())
+    text = " ".join(f"{text.strip().rstrip('.')}." for text in said if text.strip())
+    return f"{text[:1].upper()}{text[1:]}"

@@ -283,7 +283,7 @@ def _signer(review: Review, record: Record, name: str) -> list[str]:
     if not originators(record):
         faults.append(
             f"{record.calc_id}: who prepared it is not known, so its checker could be the same "
-            "person; write issue.prepared_by in the project's TOML file"
+            "person; write issue.prepared_by in the project's TOML file and issue with --update"
         )
     by = sorted({mark.by for mark in review.marks})
     if name not in by:

@@ -165,8 +165,8 @@ def _told(review: Review, record: Record, stands: Standing) -> Iterator[str]:
         yield f"  stale: {stale.why} {stale.marks}: {lines}{more}{stale.more}"
     for found in printed.findings:
         yield f"  finding {found.number}, {found.severity}, {found.standing}: {found.text}"
-    for sentence in (*printed.conflicts, *printed.signed):
-        yield f"  {sentence}"
+    yield from (f"  conflict: {sentence}" for sentence in printed.conflicts)
+    yield from (f"  {sentence}" for sentence in printed.signed)
 
 
 def _labels(record: Record, ids: Iterable[str]) -> str:
@@ -178,4 +178,6 @@ def _labels(record: Record, ids: Iterable[str]) -> str:
 def _merge_conflicts(made: Merged, stands: Standing) -> Iterator[str]:
     """Give what only the merging could see: numbers given anew, fields that differed."""
     known = {conflict.sentence for conflict in stands.conflicts}
-    yield from (f"  {each.sentence}" for each in made.conflicts if each.sentence not in known)
+    yield from (
+        f"  conflict: {each.sentence}" for each in made.conflicts if each.sentence not in known
+    )
