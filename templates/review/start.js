@@ -251,8 +251,8 @@ class Desk {
       this.panel.line();
       const stale = [...calc.states.values()].filter((state) => state === "stale").length;
       const told = [
-        stale ? `${stale} lines have changed since they were marked` : "",
-        calc.disputed.size ? `${calc.disputed.size} lines in conflict` : "",
+        stale ? `${many(stale, "line has", "lines have")} changed since marked` : "",
+        calc.disputed.size ? `${many(calc.disputed.size, "line", "lines")} in conflict` : "",
       ].filter(Boolean).join(", ");
       this.panel.say(`${file.name} is brought in${told ? `: ${told}` : ""}. Nothing that was here is lost.`);
     } catch (error) {

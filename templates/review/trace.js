@@ -40,7 +40,17 @@ const FILTERS = [
   ["unmarked", "Not marked"], ["queried", "Queried"], ["stale", "Stale"],
 ];
 
-// Tells which lines a filter shows.
+// Counts in words: 1 line, 2 lines.
+function many(number, one, more) {
+  return `${number} ${number === 1 ? one : more}`;
+}
+
+// Tells whether a line has changed since somebody marked it.
+function isOutdated(line) {
+  return (line.calc.marks.get(line.id) ?? []).some((mark) => mark.digest !== line.digest);
+}
+
+// Tells which lines a filter shows; a query on a line that has changed since is stale as well.
 function isShown(filter, line, state, inFinding) {
   switch (filter) {
     case "checks": return line.kind === "check";
@@ -48,7 +58,7 @@ function isShown(filter, line, state, inFinding) {
     case "findings": return inFinding;
     case "unmarked": return line.needed && (state === "" || state === "stale");
     case "queried": return state === "queried";
-    case "stale": return state === "stale";
+    case "stale": return state === "stale" || (state === "queried" && isOutdated(line));
     default: return true;
   }
 }

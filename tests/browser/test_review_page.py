@@ -470,7 +470,7 @@ def test_a_file_is_brought_in_and_nothing_here_is_lost(opened: Open) -> None:
     row(page, "last/r").locator(".result").click()
     page.keyboard.press("a")
     bring(page, theirs.to_text())
-    assert "1 lines in conflict" in status(page)
+    assert "1 line in conflict" in status(page)
     assert margins(page) == {"last/r": "≠ conflict", "last/wide": "? query"}
     told = page.locator("[data-rv=marks] li").all_inner_texts()
     assert any("<img src=x onerror=alert(1)>" in each for each in told)
@@ -486,12 +486,26 @@ def test_stale_marks_are_shown_with_their_cause(opened: Open) -> None:
     changed = {"data/h", "span-1/d", "span-1/within", "span-2/d", "span-2/within", "last/r",
                "last/wide"}  # fmt: skip
     assert {line for line, mark in margins(page).items() if mark == "stale"} == changed
-    assert "7 lines have changed since they were marked" in status(page)
+    assert "7 lines have changed since marked" in status(page)
     row(page, "span-1/within").locator(".result").click()
     told = page.locator("[data-rv=marks] li").inner_text()
     assert told.endswith("arithmetic checked; stale: changed since: 1.2 Depth")
     page.keyboard.press("7")
     assert set(shown(page)) == changed
+
+
+def test_a_query_on_a_line_changed_since_is_stale_as_well(opened: Open) -> None:
+    """Block a does not rest on h: its query stands; that of the depth d asks of another depth."""
+    older, ott = beam(h="500 mm"), Reviewer("Ines Ott", "IO")
+    review = marked(Review("B1", reviewers=(ott,)), older, ["span-1/d", "span-1/a"],
+                    by="Ines Ott", at=AT, state=State.QUERIED)  # fmt: skip
+    page = opened()
+    bring(page, review.to_text())
+    page.keyboard.press("Escape")
+    page.keyboard.press("7")
+    assert shown(page) == ["span-1/d"]
+    page.keyboard.press("6")
+    assert shown(page) == ["span-1/d", "span-1/a"]
 
 
 @pytest.mark.parametrize(
