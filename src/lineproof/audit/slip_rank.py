@@ -21,6 +21,8 @@ SELECTED = frozenset((
 """Families of edits that are each known from practice: each keeps more than an even part."""
 AGAIN = 0.5
 """Each further slip of a kind counts so much less than the one before."""
+BESIDE = 0.1
+"""A second cause of the same value is told if it is so likely beside the first."""
 _SAME = 1e-9
 
 
@@ -75,7 +77,7 @@ def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
         same = next((group for group in groups if _equal(group.value, fit.value)), None)
         if same is None:
             groups.append(Group(share, {kind: fit}))
-        else:
+        elif share >= BESIDE * same.share:
             same.fits.setdefault(kind, fit)
     return tuple(
         _slip(group, claim) for group in _varied(groups)[:MOST] if group.share >= LEAST_LIKELY
