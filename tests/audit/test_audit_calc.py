@@ -4,8 +4,10 @@ from __future__ import annotations
 
 from functools import cache
 
-from lineproof.audit.data import Audit, Severity, Verdict
+from lineproof.audit.data import Audit, Claim, Interval, Severity, Verdict
 from lineproof.audit.graph import Graph
+from lineproof.audit.judge import judge
+from lineproof.audit.slips import searching
 from lineproof.notebook.audited import audited
 from lineproof.notebook.read import read_calc
 from lineproof.resources import folder
@@ -75,3 +77,12 @@ def test_a_second_path_is_no_effect() -> None:
     """The depth of the block claimed with the web makes the proof of M_r fail: not of the beam."""
     finding = next(f for f in _audit().findings if "sag-1/a" in f.ids)
     assert {effect.check for effect in finding.effects} == {"sag-1/yield", "sag-1/strength"}
+
+
+def test_a_claim_is_not_explained_by_itself() -> None:
+    """580 for 496 and for 645: no factor, row or constant gives it; it was said to be copied."""
+    graph = Graph(read_calc(CALCS / "floor-beam.ipynb").record)
+    for line in ("anchorage-bar-1/l_d", "anchorage-bar-4/l_d"):
+        claim = Claim(line, "580", "mm", 580.0, Interval(579.5, 580.5))
+        judged = next(each for each in judge(graph, [claim], searching()) if each.claim)
+        assert (judged.verdict, judged.slips) == (Verdict.ORIGIN, ())

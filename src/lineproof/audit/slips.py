@@ -252,6 +252,8 @@ def _fits(
         found = fitting(onward.quick, tried.values, low, high) if tried.values else []
     for at in found:
         edit = tried.edits[at]
+        if onward is not None and edit.value == target.claim.value:
+            continue  # the claim itself, or what only repeats it, explains nothing above it
         made = _worked(tried.line, edit, target, onward)
         if made is not None:
             yield Fit(edit, *made, tried.share[edit.family] * nearness, where)
