@@ -1,8 +1,14 @@
-"""Where the templates and the shipped calcs lie: at the root of a checkout, else in the package."""
+"""Where the templates and the shipped calcs lie: at the root of a checkout, else in the package.
+
+Also how a file of the user is opened.
+"""
 
 from __future__ import annotations
 
+import errno
+import stat
 from pathlib import Path
+from typing import BinaryIO
 
 _PACKAGE = Path(__file__).resolve().parent
 
@@ -16,3 +22,14 @@ def folder(name: str) -> Path:
     if (root / "pyproject.toml").is_file() and (root / name).is_dir():
         return root / name
     return _PACKAGE / name
+
+
+def open_file(path: Path) -> BinaryIO:
+    """Open a file to read its bytes; raises :class:`OSError`, also for a pipe or a device.
+
+    A pipe may wait for ever for who writes into it, and a device may never end.
+    """
+    mode = path.stat().st_mode
+    if not (stat.S_ISREG(mode) or stat.S_ISDIR(mode)):
+        raise OSError(errno.EINVAL, "a pipe or a device; give a saved file", str(path))
+    return path.open("rb")

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import csv
 import io
+import os
 import zipfile
 from pathlib import Path
 
@@ -209,3 +210,45 @@ def test_a_date_is_told_as_one(tmp_path: Path) -> None:
 def test_another_ending_is_not_written() -> None:
     with pytest.raises(UserError, match=r"'.pdf' is no ending of a table"):
         write_table(["id"], GOOD, ".pdf")
+
+
+@pytest.mark.parametrize(
+    ("name", "content"),
+    [
+        ("xl/strings.bin", b'<!DOCTYPE x [<!ENTITY a "600">]><x>&a;</x>'),
+        ("xl/a.xml", '<!DOCTYPE x [<!ENTITY a "600">]><x>&a;</x>'.encode("utf-16")),
+        ("xl/a.xml", b'<?xml version="1.0" encoding="cp037"?>' + "<!DOCTYPE x>".encode("cp037")),
+    ],
+    ids=["another ending", "UTF-16", "another code page"],
+)
+def test_declarations_are_found_however_they_are_hidden(
+    tmp_path: Path, name: str, content: bytes
+) -> None:
+    path = with_member(workbook(tmp_path, [["id", "claimed"], ["a", 1]]), name, content)
+    assert "declarations that no spreadsheet writes" in faults(path)[0]
+
+
+@pytest.mark.parametrize(
+    ("shown", "stored", "read"),
+    [
+        ("0%", 0.5, "0.5 (shown in percent)"),
+        ("0,", 600000, "600000 (shown in thousands)"),
+        ("#,##0", 600, "600"),
+        ('0.0" % of steel"', 0.5, "0.5"),
+    ],
+)
+def test_a_format_that_shows_another_number_is_told(
+    tmp_path: Path, shown: str, stored: float, read: str
+) -> None:
+    """50 % is shown where 0.5 is stored: neither may be taken for the claim in silence."""
+    path = workbook(tmp_path, [["id", "claimed"], ["a", stored]])
+    book = load_workbook(path)
+    book.worksheets[0]["B2"].number_format = shown
+    book.save(path)
+    assert read_table(path).rows[0].cells["claimed"] == read
+
+
+def test_a_pipe_is_refused_without_waiting_for_its_writer(tmp_path: Path) -> None:
+    path = tmp_path / "claims.csv"
+    os.mkfifo(path)
+    assert "a pipe or a device; give a saved file" in faults(path)[0]

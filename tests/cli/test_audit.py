@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import csv
 import json
+import os
 import subprocess
 import sys
 from pathlib import Path
@@ -347,3 +348,34 @@ def test_a_name_or_a_day_that_goes_nowhere_is_refused(record_file: Path, capsys:
         "--date is the day of a printed report; give --into DIR with it",
         "--checker stands in a report or a review; give --into DIR or --review FILE with it",
     ]
+
+
+def test_a_name_that_no_folder_can_hold_gets_a_sentence(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    """Names of files end at 255 bytes."""
+    before = sorted(tmp_path.iterdir())
+    assert audit(record_file, "--blank", str(tmp_path / f"{'a' * 300}.csv")) == 2
+    assert "a.csv: cannot be reached (File name too long)" in capsys.readouterr().err
+    assert sorted(tmp_path.iterdir()) == before
+
+
+def test_the_name_of_a_file_does_not_steer_the_terminal(
+    record_file: Path, tmp_path: Path, capsys: Capture
+) -> None:
+    assert audit(record_file, "--blank", str(tmp_path / "a\x1b[31m.csv")) == 0
+    assert "\x1b" not in capsys.readouterr().out
+
+
+@pytest.mark.parametrize("ending", [".json", ".html", ".pdf", ".ipynb"])
+def test_a_pipe_in_place_of_a_record_is_refused(
+    tmp_path: Path, capsys: Capture, ending: str
+) -> None:
+    pipe = tmp_path / f"calc{ending}"
+    os.mkfifo(pipe)
+    commands = [["audit", str(pipe)], ["review", str(pipe), "--marks", str(pipe)]]
+    if ending in (".html", ".pdf"):
+        commands.append(["verify", str(pipe)])
+    for command in commands:
+        assert main(command) == 2
+        assert f"calc{ending}: cannot be read (a pipe or a device" in capsys.readouterr().err

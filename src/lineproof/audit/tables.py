@@ -17,6 +17,7 @@ from pathlib import Path
 from lineproof.audit.workbooks import read_workbook, workbook_bytes
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo
+from lineproof.resources import open_file
 
 MOST_BYTES = 20_000_000
 MOST_ROWS = 20_000
@@ -98,7 +99,7 @@ def read_with_faults(path: Path) -> tuple[Table, TableFaults]:
 
 def _content(path: Path, name: str) -> bytes:
     try:
-        with path.open("rb") as stream:
+        with open_file(path) as stream:
             content = stream.read(MOST_BYTES + 1)
     except OSError as error:
         raise UserError(f"{name}: cannot be read ({error.strerror})") from None

@@ -29,6 +29,11 @@ _SHEET = re.compile(r"xl/worksheets/[^/]+\.xml", re.IGNORECASE)
 _DECIMALS = re.compile(r"(?:#,##)?0(?:\.(0+))?\Z")
 _POWERS = re.compile(r"0(?:\.(0+))?E\+0+\Z")
 _GENERAL_DIGITS = 10
+_ENCODING = re.compile(
+    rb"[\xef\xbb\xbf\xfe\xff]{0,3}\s*<\?xml\s[^>]{0,200}?encoding\s*=\s*[\"']([^\"']{0,40})"
+)
+_ENCODINGS = (b"utf-8", b"utf8", b"utf-16", b"utf-16le", b"utf-16be", b"us-ascii", b"iso-8859-1")
+_QUOTED = re.compile(r"\"[^\"]*\"|\\.|\[[^\]]*\]")
 _WIDTHS = {"id": 26, "label": 8, "place": 44, "symbol": 10, "title": 48, "claimed": 14, "where": 18}
 
 
@@ -90,10 +95,8 @@ def _content_faults(
         return [f"{name}: holds macros; save it as .xlsx without them"]
     faults = []
     for member in members:
-        if not member.filename.lower().endswith((".xml", ".rels")):
-            continue
-        text = archive.read(member)
-        if b"<!DOCTYPE" in text or b"<!ENTITY" in text:
+        text = archive.read(member)  # whatever its name: the directory inside says what is read
+        if _declares(text):
             return [f"{name}: holds declarations that no spreadsheet writes. Not opened"]
         if b"macroEnabled" in text:
             return [f"{name}: a workbook that may hold macros; save it as .xlsx without them"]
@@ -103,6 +106,14 @@ def _content_faults(
                 for found in _MERGED.findall(text)[:10]
             ]
     return faults
+
+
+def _declares(text: bytes) -> bool:
+    """Tell whether a file inside declares entities, or an encoding that could hide them."""
+    plain = text.replace(b"\0", b"")  # UTF-16
+    encoding = _ENCODING.match(plain)
+    hides = encoding is not None and encoding[1].lower() not in _ENCODINGS
+    return hides or b"<!DOCTYPE" in plain or b"<!ENTITY" in plain
 
 
 def _rows(rows: Iterator[tuple[Cell, ...]]) -> Iterator[list[str]]:
@@ -126,14 +137,33 @@ def _shown(cell: Cell) -> str:
     if isinstance(value, bool) or not isinstance(value, int | float):
         is_date = isinstance(value, dt.date | dt.time | dt.timedelta)
         return f"{value} (a date)" if is_date else str(value)
-    shown = str(cell.number_format or "General")
+    return _number(value, str(cell.number_format or "General"))
+
+
+def _number(value: float, shown: str) -> str:
+    """Return a number as a format shows it."""
     plain = _DECIMALS.match(shown)
     if plain:
         return f"{value:.{len(plain[1] or '')}f}"
+    scaled = _scaled(shown)
+    if scaled:
+        return f"{value:.{_GENERAL_DIGITS}g} {scaled}"
     powers = _POWERS.match(shown)
     if powers:
         return f"{value:.{len(powers[1] or '')}e}"
     return str(value) if isinstance(value, int) else f"{value:.{_GENERAL_DIGITS}g}"
+
+
+def _scaled(shown: str) -> str:
+    """Say that a format shows another number than the cell holds; "" for all others.
+
+    >>> _scaled("0.0%"), _scaled("0,"), _scaled('0 "%"')
+    ('(shown in percent)', '(shown in thousands)', '')
+    """
+    bare = _QUOTED.sub("", shown.partition(";")[0])
+    if "%" in bare:
+        return "(shown in percent)"
+    return "(shown in thousands)" if re.search(r"[0#?],+(?![0#?,])", bare) else ""
 
 
 def workbook_bytes(headings: Sequence[str], rows: Sequence[Sequence[str]]) -> bytes:

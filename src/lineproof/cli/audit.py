@@ -23,6 +23,7 @@ from lineproof.errors import FaultList, UserError
 from lineproof.notebook.audited import audited, picked
 from lineproof.notebook.records import read_records
 from lineproof.record import Record
+from lineproof.typeset import printable
 
 DONE, FOUND = 0, 1
 
@@ -41,7 +42,7 @@ def run(options: argparse.Namespace) -> int:
         files[options.review] = _reviewed(audit, record, options).to_text().encode()
     if files:
         write_all(files)
-        sys.stderr.writelines(f"{path}\n" for path in sorted(files))
+        sys.stderr.writelines(f"{printable(str(path))}\n" for path in sorted(files))
     if options.json:
         sys.stdout.write(json.dumps(as_data(audit, graph), indent=1, allow_nan=False) + "\n")
     else:
@@ -75,7 +76,8 @@ def _write_blank(record: Record, options: argparse.Namespace) -> None:
         raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
     write_all({path: content})
     column, option = ("drawn", "drawing") if options.blank_drawing else ("claimed", "claims")
-    sys.stdout.write(f"{path}: fill in the column '{column}', then give it as --{option}\n")
+    name = printable(str(path))
+    sys.stdout.write(f"{name}: fill in the column '{column}', then give it as --{option}\n")
 
 
 def _report(audit: Audit, record: Record, options: argparse.Namespace) -> dict[Path, bytes]:

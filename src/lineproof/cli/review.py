@@ -16,6 +16,7 @@ from lineproof.errors import FaultList, UserError
 from lineproof.notebook.records import LARGEST_FILE, read_records
 from lineproof.package.reviewed import REVIEW_SUFFIX
 from lineproof.record import Record
+from lineproof.resources import open_file
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
@@ -40,7 +41,7 @@ def run(options: argparse.Namespace) -> int:
     if options.merge or options.sign:
         place = options.merge or files[0]
         write_all({place: review.to_text().encode()})
-        sys.stdout.write(f"{place}\n")
+        sys.stdout.write(f"{printable(str(place))}\n")
     stands = standing(review, record)
     told = [*_told(review, record, stands), *_merge_conflicts(made, stands)]
     sys.stdout.writelines(f"{printable(line)}\n" for line in told)
@@ -108,7 +109,7 @@ def read_file(path: Path) -> Review:
     from lineproof.audit.review_read import read_review  # noqa: PLC0415 - as in run
 
     try:
-        with path.open("rb") as stream:
+        with open_file(path) as stream:
             content = stream.read(LARGEST_FILE + 1)
         text = content.decode("utf-8-sig")
     except FileNotFoundError:

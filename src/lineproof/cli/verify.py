@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING
 from lineproof.cli.lines import MOST_NAMED
 from lineproof.errors import UserError
 from lineproof.notebook.records import LARGEST_FILE, read_records
+from lineproof.resources import open_file
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
@@ -45,7 +46,7 @@ def _content(path: Path) -> bytes:
     if path.suffix.lower() not in _KINDS:
         raise UserError(f"{path}: not a printed package; give one of {', '.join(_KINDS)}")
     try:
-        with path.open("rb") as stream:
+        with open_file(path) as stream:
             content = stream.read(LARGEST_FILE + 1)
     except OSError as error:
         raise UserError(f"{path}: cannot be read ({error.strerror})") from None

@@ -9,6 +9,7 @@ from pathlib import Path
 from typing import Any
 
 from lineproof.errors import UserError
+from lineproof.resources import open_file
 
 PARAMETERS = "parameters"
 LEFT_OUT = "remove-cell"
@@ -40,7 +41,7 @@ class Cell:
 def load_notebook(path: Path) -> dict[str, Any]:
     """Read a notebook file as plain JSON data; raises :class:`UserError`."""
     try:
-        with path.open("rb") as stream:
+        with open_file(path) as stream:
             content = stream.read(LARGEST_NOTEBOOK + 1)
     except OSError as error:
         raise UserError(f"{path}: cannot be read ({error.strerror})") from None

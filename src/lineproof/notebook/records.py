@@ -7,6 +7,7 @@ from pathlib import Path
 
 from lineproof.errors import UserError
 from lineproof.record import Record
+from lineproof.resources import open_file
 
 LARGEST_FILE = 64_000_000
 
@@ -52,7 +53,7 @@ def _from_notebook(path: Path) -> list[Record]:
 
 def _content(path: Path) -> bytes:
     """Read a file, never more than a package could hold."""
-    with path.open("rb") as stream:
+    with open_file(path) as stream:
         content = stream.read(LARGEST_FILE + 1)
     if len(content) > LARGEST_FILE:
         raise UserError(f"{path}: larger than {LARGEST_FILE // 1_000_000} MB; not read")
