@@ -189,7 +189,7 @@ class Report:
         """Name the slips that give a claimed value beside the one that the advice names."""
         slips = self.slips.get(finding.ids[0], ()) if finding.ids else ()
         others = [
-            s.sentence.rstrip(".")
+            f"{s.sentence[:1].lower()}{s.sentence[1:]}".rstrip(".")
             for s in slips[:MOST_SLIPS]
             if s.sentence.lower() not in finding.advice.lower()
         ]

@@ -281,7 +281,8 @@ class _Compared:
                 yield Alteration(
                     Where.DRAWN,
                     f"the {what} of the page is not the one that is printed here: what a browser "
-                    "shows may not be what stands in the page",
+                    "shows may not be what stands in the page; if another version of lineproof "
+                    "printed it, verify it with that version, or issue it again",
                 )
 
     def _altered(
