@@ -10,7 +10,8 @@ from tests.audit import hand
 from tests.audit.hand import beam, typed
 
 from lineproof.audit.audit import audit_claims
-from lineproof.audit.data import Finding, Severity
+from lineproof.audit.data import Effect, Finding, Severity
+from lineproof.audit.findings import importance
 from lineproof.audit.graph import Graph
 from lineproof.audit.review import Review, Reviewer
 from lineproof.audit.review_findings import with_findings
@@ -52,6 +53,7 @@ def test_severity_goes_by_the_checks() -> None:
     failing = sheet.close()
     cases = [
         (failing, {"beam/M_r": "300"}, Severity.CRITICAL),  # holds as claimed, fails when right
+        (failing, {"beam/M_r": "230"}, Severity.MAJOR),  # 270/230 hides 270/206.6: fails either way
         (beam(), {"strength/M_f": "150"}, Severity.MAJOR),  # 150/206.6 hides 180/206.6
         (beam(), {"strength/M_f": "178"}, Severity.MINOR),  # 178/206.6 = 0.861 hides 0.871
         (beam(), {"strength/M_f": "193"}, Severity.MINOR),  # asks for more than it needs
@@ -68,6 +70,18 @@ def test_findings_come_the_gravest_first() -> None:
     """h_f moves nothing; M_f 150 for 180 hides 0.87; d 500 asks for more."""
     said = found(beam(), {"given/h_f": "120 mm", "strength/M_f": "150", "beam/d": "500"})
     assert [f.ids[0] for f in said] == ["strength/M_f", "beam/d", "given/h_f"]
+
+
+def test_of_equal_severity_what_turns_a_check_comes_before_what_only_moves_one() -> None:
+    """A check from 1.02 to 0.98 turns; one from 0.40 to 0.90 moves more and holds all along."""
+    turning = Effect("a", 1.02, 0.98, holds_as_claimed=False, holds=True, sentence="")
+    moving = Effect("b", 0.40, 0.90, holds_as_claimed=True, holds=True, sentence="")
+    little = replace(moving, claimed=0.85)
+    turns, moves, least = (
+        Finding("claims", Severity.MAJOR, "", (), effects=(effect,))
+        for effect in (turning, moving, little)
+    )
+    assert sorted([least, moves, turns], key=importance) == [turns, moves, least]
 
 
 def test_a_line_not_changed_with_its_input_says_so() -> None:

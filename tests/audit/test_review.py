@@ -10,7 +10,7 @@ from typing import Any
 import pytest
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import Kind, Raised, Review, Reviewer, Said, State
+from lineproof.audit.review import Kind, Raised, Review, Reviewer, Said, SignOff, State
 from lineproof.audit.review_marks import (
     marked,
     originators,
@@ -335,6 +335,13 @@ def test_the_originator_may_answer_a_finding() -> None:
     assert refused_reviewers(replace(fresh(), findings=(answered,)), record) == []
     closed = replace(FINDING, closed=(Said("A. Verdon", AT),))
     assert len(refused_reviewers(replace(fresh(), findings=(closed,)), record)) == 1
+
+
+def test_the_originator_may_not_sign_off_even_without_a_mark() -> None:
+    record = beam(prepared="A. Verdon")
+    signed = replace(fresh(), signed=(SignOff(record.digest, "A. Verdon", "2026-12-02"),))
+    (fault,) = refused_reviewers(signed, record)
+    assert "A. Verdon prepared this calc" in fault
 
 
 def test_several_originators_are_told_apart() -> None:
