@@ -13,6 +13,7 @@ from lineproof.audit.effects import (
     turned_decisions,
 )
 from lineproof.audit.graph import Graph
+from lineproof.formula import criterion
 from lineproof.record import Record
 from lineproof.sheet import Sheet
 
@@ -153,3 +154,23 @@ def test_the_place_of_a_part(title: str, place: str) -> None:
 def test_what_is_told_last_decides_the_order() -> None:
     assert CLAIMED.claimed_first
     assert not DRAWN.claimed_first
+
+
+def test_a_check_that_fails_when_put_right_comes_before_one_that_holds_after_all(
+    graph: Graph,
+) -> None:
+    # Strength 0.882 hides 1.059, by 0.18; load 100/50 = 2 is really 0.8, by 1.2: it moves more.
+    found = effects_of(graph, {"sag-2/A_s": 1200.0, "data/w_f": 100.0})
+    assert [effect.check for effect in found] == ["sag-2/strength", "sag-2/load", "sag-2/minimum"]
+
+
+def test_a_check_that_only_proves_the_calc_is_no_effect() -> None:
+    agree = criterion("a <= b", title="Both ways agree", key="agree", proof=True)
+    sheet = Sheet("B2")
+    with sheet.part("data", "Data"):
+        sheet.given("a", "2 m", "first way")
+        sheet.given("b", "2 m", "second way")
+        sheet.check(agree)
+        sheet.check("a <= b", title="Room", key="room")
+    found = effects_of(Graph(sheet.close()), {"data/a": 3000.0})
+    assert [effect.check for effect in found] == ["data/room"]
