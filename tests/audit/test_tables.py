@@ -10,6 +10,7 @@ from pathlib import Path
 
 import pytest
 from openpyxl import Workbook, load_workbook
+from openpyxl.worksheet.formula import ArrayFormula
 
 from lineproof.audit.tables import read_table, write_table
 from lineproof.errors import UserError
@@ -252,3 +253,30 @@ def test_a_pipe_is_refused_without_waiting_for_its_writer(tmp_path: Path) -> Non
     path = tmp_path / "claims.csv"
     os.mkfifo(path)
     assert "a pipe or a device; give a saved file" in faults(path)[0]
+
+
+@pytest.mark.parametrize(
+    ("name", "content", "said"),
+    [
+        ("xl/macrosheets/sheet1.xml", b"<macrosheet/>", "holds macros"),
+        ("a.xml", b'<a t="application/vnd.ms-excel.sheet.macroEnabled.main+xml"/>', "may hold"),
+    ],
+)
+def test_macros_under_other_names_are_refused(
+    tmp_path: Path, name: str, content: bytes, said: str
+) -> None:
+    path = with_member(workbook(tmp_path, [["id", "claimed"], ["a", 1]]), name, content)
+    assert said in faults(path)[0]
+
+
+def test_a_formula_of_many_cells_is_refused(tmp_path: Path) -> None:
+    formula = ArrayFormula("B2:B3", "=A2:A3*2")
+    path = workbook(tmp_path, [["id", "claimed"], ["a", formula], ["b", 2]])
+    assert "row 2, claimed: '={...}' is a formula" in faults(path)[0]
+
+
+def test_a_table_too_large_or_too_wide_is_refused(tmp_path: Path) -> None:
+    large = saved(tmp_path, "id,claimed\n" + "x,1\n" * 5_000_001)
+    assert "larger than 20 MB" in faults(large)[0]
+    wide = saved(tmp_path, ",".join(f"h{n}" for n in range(61)) + "\n1\n")
+    assert "more than 60 columns" in faults(wide)[0]
