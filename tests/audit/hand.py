@@ -10,9 +10,9 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
+from lineproof.audit.claims.judge import SlipFinder, judge
 from lineproof.audit.data import Claim, Judged, read_from
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import SlipFinder, judge
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
 from lineproof.sheet import Sheet

@@ -11,7 +11,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 
 from lineproof.audit.data import Finding
-from lineproof.audit.junior import Cell
+from lineproof.audit.junior.search import Cell
 from lineproof.record import Record
 from lineproof.sheet import Sheet
 from lineproof.standards.catalogue import NOTATION

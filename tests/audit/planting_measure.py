@@ -11,10 +11,10 @@ from collections import Counter
 from collections.abc import Iterable
 from dataclasses import dataclass, field
 
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Claim, Judged, Verdict
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
-from lineproof.audit.slips import find_slips
+from lineproof.audit.slips.search import find_slips
 
 from .planting import Sheet, sheets, told_at
 from .planting_beams import BEAMS, beam

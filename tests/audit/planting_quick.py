@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
-from lineproof.audit.blank import quick_lines
+from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from hypothesis import strategies as st
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import (
+from lineproof.audit.review.data import (
     Kind,
     Mark,
     Raised,

@@ -11,7 +11,7 @@ from functools import cache
 
 from lineproof.audit.data import Claim, Interval, Slip, read_from
 from lineproof.audit.graph import Graph
-from lineproof.audit.slips import find_slips
+from lineproof.audit.slips.search import find_slips
 from lineproof.formula import formula
 from lineproof.quantity.units import internal_factor
 from lineproof.sheet import Sheet

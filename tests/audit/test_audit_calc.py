@@ -4,10 +4,10 @@ from __future__ import annotations
 
 from functools import cache
 
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Audit, Claim, Interval, Severity, Verdict
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
-from lineproof.audit.slips import searching
+from lineproof.audit.slips.search import searching
 from lineproof.notebook.audited import audited
 from lineproof.notebook.read import read_calc
 from lineproof.resources import folder

@@ -11,7 +11,7 @@ from tests.audit.hand import beam
 from tests.beams import gallery, test_section_study
 from tests.beams.continuous import flow
 
-from lineproof.audit.blank import HEADINGS, blank_table, quick_lines
+from lineproof.audit.claims.blank import HEADINGS, blank_table, quick_lines
 from lineproof.audit.graph import Graph
 from lineproof.errors import UserError
 from lineproof.record.entry import GIVEN, LOOKUP

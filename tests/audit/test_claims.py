@@ -7,11 +7,11 @@ from pathlib import Path
 import pytest
 from tests.audit.hand import beam, sheet_of
 
-from lineproof.audit.blank import blank_table
-from lineproof.audit.claims import read_claims
+from lineproof.audit.claims.blank import blank_table
+from lineproof.audit.claims.read import read_claims
+from lineproof.audit.claims.tables import read_table, write_table
 from lineproof.audit.data import Claim
 from lineproof.audit.graph import Graph
-from lineproof.audit.tables import read_table, write_table
 from lineproof.errors import UserError
 
 

@@ -7,10 +7,10 @@ from pathlib import Path
 
 import pytest
 
+from lineproof.audit.claims.tables import Row, read_table, write_table
 from lineproof.audit.data import Finding, Severity
-from lineproof.audit.drawing import HEADINGS, drawing_blank, drawing_findings
-from lineproof.audit.drawing_rows import Item, items_of
-from lineproof.audit.tables import Row, read_table, write_table
+from lineproof.audit.search.drawing import HEADINGS, drawing_blank, drawing_findings
+from lineproof.audit.search.drawing_rows import Item, items_of
 from lineproof.errors import UserError
 from lineproof.record import Record
 

@@ -13,8 +13,8 @@ from lineproof.audit.audit import audit_claims
 from lineproof.audit.data import Effect, Finding, Severity
 from lineproof.audit.findings import importance
 from lineproof.audit.graph import Graph
-from lineproof.audit.review import Review, Reviewer
-from lineproof.audit.review_findings import with_findings
+from lineproof.audit.review.data import Review, Reviewer
+from lineproof.audit.review.findings import with_findings
 from lineproof.record import Record
 
 AT = "2026-12-01T15:05:33Z"

@@ -15,9 +15,9 @@ from tests.beams.gallery import EDGE, RECTANGULAR, record_of
 
 from lineproof import beams as procedures
 from lineproof.audit.audit import audit_claims
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Claim, Interval, Slip, Verdict
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record

@@ -12,8 +12,8 @@ from tests.audit.altered import CALCS, NAMES, demo
 from tests.audit.junior_beam import code, own_record, said
 
 from lineproof.audit.data import Finding, Severity
-from lineproof.audit.junior import Cell, audit_cells
-from lineproof.audit.junior_cells import LONGEST_CELL, MOST_CELLS
+from lineproof.audit.junior.cells import LONGEST_CELL, MOST_CELLS
+from lineproof.audit.junior.search import Cell, audit_cells
 from lineproof.notebook.cells import Cell as Stored
 from lineproof.notebook.cells import cells_of, joined, load_notebook
 from lineproof.notebook.read import stale_cells

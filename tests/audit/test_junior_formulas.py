@@ -4,9 +4,9 @@ from __future__ import annotations
 
 import pytest
 
-from lineproof.audit.junior_catalogue import Said, catalogue_of, compared
-from lineproof.audit.junior_edits import branches, text_of
-from lineproof.audit.junior_foreign import foreign_rule
+from lineproof.audit.junior.catalogue import Said, catalogue_of, compared
+from lineproof.audit.junior.edits import branches, text_of
+from lineproof.audit.junior.foreign import foreign_rule
 from lineproof.formula import parse_line
 from lineproof.standards.catalogue import formulas
 

@@ -16,7 +16,7 @@ from tests.audit.junior_beam import own_record, said, sheet_with
 from tests.beams import gallery
 
 from lineproof.audit.data import Finding, Severity
-from lineproof.audit.junior import audit_record
+from lineproof.audit.junior.search import audit_record
 from lineproof.errors import UserError
 from lineproof.formula import criterion, formula
 from lineproof.record import Record

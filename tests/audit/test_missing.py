@@ -7,8 +7,8 @@ from tests.beams import gallery
 from tests.beams.continuous.flow import MIXED, record_of
 
 from lineproof.audit.data import Severity
-from lineproof.audit.missing import CONTINUOUS, SINGLE, Expected, missing_checks
-from lineproof.audit.missing_places import Where
+from lineproof.audit.search.missing import CONTINUOUS, SINGLE, Expected, missing_checks
+from lineproof.audit.search.missing_places import Where
 from lineproof.record import Record
 from lineproof.sheet import Sheet
 

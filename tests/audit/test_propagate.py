@@ -11,9 +11,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from tests.audit.hand import beam, sheet_of, typed
 
+from lineproof.audit.claims.propagate import Form, Function, Worker, claimed_form, combined
 from lineproof.audit.data import Interval
 from lineproof.audit.graph import Graph
-from lineproof.audit.propagate import Form, Function, Worker, claimed_form, combined
 
 X = claimed_form("x", Interval(9.0, 11.0))
 Y = claimed_form("y", Interval(4.0, 6.0))

@@ -13,10 +13,10 @@ from collections.abc import Mapping
 
 import pytest
 
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Claim, Judged, Verdict, read_from
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
-from lineproof.audit.slips import find_slips
+from lineproof.audit.slips.search import find_slips
 from lineproof.quantity.units import internal_factor
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import flange, flexure, materials, minimum, stress_block

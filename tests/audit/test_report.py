@@ -9,12 +9,12 @@ from dataclasses import replace
 import pytest
 from tests.audit.hand import beam, typed
 
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Audit, Effect, Finding, Severity
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
 from lineproof.audit.report import audit_report, report_files, report_record
-from lineproof.audit.slips import find_slips
-from lineproof.audit.verify import Outcome, verify
+from lineproof.audit.slips.search import find_slips
+from lineproof.audit.verify.verification import Outcome, verify
 from lineproof.errors import UserError
 from lineproof.record import recompute
 

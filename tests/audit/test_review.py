@@ -10,8 +10,8 @@ from typing import Any
 import pytest
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import Kind, Raised, Review, Reviewer, Said, SignOff, State
-from lineproof.audit.review_marks import (
+from lineproof.audit.review.data import Kind, Raised, Review, Reviewer, Said, SignOff, State
+from lineproof.audit.review.marks import (
     marked,
     originators,
     refused_reviewers,
@@ -20,7 +20,7 @@ from lineproof.audit.review_marks import (
     stale_marks,
     standing,
 )
-from lineproof.audit.review_read import read_review
+from lineproof.audit.review.read import read_review
 from lineproof.errors import UserError
 from lineproof.record import Record
 from lineproof.sheet import Sheet

@@ -10,7 +10,7 @@ from hypothesis import given, settings
 from tests.audit.review_random import DIGEST, NAMES, RECORD, TIMES, reviews
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import (
+from lineproof.audit.review.data import (
     Kind,
     Mark,
     Raised,
@@ -20,8 +20,8 @@ from lineproof.audit.review import (
     Said,
     State,
 )
-from lineproof.audit.review_merge import conflicts, merge
-from lineproof.audit.review_read import read_review
+from lineproof.audit.review.merge import conflicts, merge
+from lineproof.audit.review.read import read_review
 from lineproof.errors import UserError
 
 

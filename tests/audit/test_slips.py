@@ -10,9 +10,9 @@ from tests.beams.continuous.flow import analysed, record_so_far
 
 from lineproof.audit.data import Interval
 from lineproof.audit.graph import Graph
-from lineproof.audit.slip_digits import changed, swapped
-from lineproof.audit.slip_rank import MOST
-from lineproof.audit.slips import find_slips, none_fits, searching
+from lineproof.audit.slips.digits import changed, swapped
+from lineproof.audit.slips.rank import MOST
+from lineproof.audit.slips.search import find_slips, none_fits, searching
 from lineproof.sheet import Sheet
 
 T = 0.85 * 2000 * 400

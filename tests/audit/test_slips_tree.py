@@ -9,7 +9,7 @@ from tests.audit.slip_sheet import beam
 from tests.beams.continuous.flow import analysed, record_so_far
 
 from lineproof.audit.graph import Graph, evaluated
-from lineproof.audit.slip_tree import FAILURES, Places, places_of, text_of
+from lineproof.audit.slips.tree import FAILURES, Places, places_of, text_of
 from lineproof.formula import parse_expression, parse_line
 
 

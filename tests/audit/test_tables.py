@@ -12,7 +12,7 @@ import pytest
 from openpyxl import Workbook, load_workbook
 from openpyxl.worksheet.formula import ArrayFormula
 
-from lineproof.audit.tables import read_table, write_table
+from lineproof.audit.claims.tables import read_table, write_table
 from lineproof.errors import UserError
 
 GOOD = [["id", "claimed", "unit"], ["beam/d", "0.50", "m"], ["beam/b", "400", "mm"]]
@@ -187,7 +187,7 @@ def test_too_many_rows_are_refused_with_the_limit(tmp_path: Path) -> None:
 def test_too_many_rows_of_a_workbook(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
     path = workbook(tmp_path, [["id", "claimed"], *(["x", 1] for _ in range(30))])
     assert len(read_table(path).rows) == 30
-    monkeypatch.setattr("lineproof.audit.tables.MOST_ROWS", 29)
+    monkeypatch.setattr("lineproof.audit.claims.tables.MOST_ROWS", 29)
     assert "more than 29 rows" in faults(path)[0]
 
 

@@ -9,9 +9,9 @@ from tests.beams import gallery
 from tests.beams.continuous.flow import MIXED, record_of
 
 from lineproof.audit.data import Finding, Severity
-from lineproof.audit.slip_kinds import FAMILIES
-from lineproof.audit.traps import COVERED_BY, SLIP, TRAPS, trap_findings, traps_met
-from lineproof.audit.traps_view import Trap
+from lineproof.audit.search.traps import COVERED_BY, SLIP, TRAPS, trap_findings, traps_met
+from lineproof.audit.search.traps_view import Trap
+from lineproof.audit.slips.kinds import FAMILIES
 
 from .altered import NAMES, changed, demo, edited
 from .trap_cases import SECTION, SHEAR, STIRRUPS, Case, project

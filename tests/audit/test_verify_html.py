@@ -10,7 +10,7 @@ from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 from tests.audit import verifying as by
 
-from lineproof.audit.verify import Outcome, Source, Verification, Where, verify
+from lineproof.audit.verify.verification import Outcome, Source, Verification, Where, verify
 from lineproof.errors import UserError
 
 _BODY = re.compile(r"<main>.*</main>", re.DOTALL)

@@ -21,8 +21,8 @@ from pypdf.generic import (
 )
 from tests.audit import verifying as by
 
-from lineproof.audit import verify_pdf
-from lineproof.audit.verify import Outcome, Source, Verification, Where, verify
+from lineproof.audit.verify import pdf as verify_pdf
+from lineproof.audit.verify.verification import Outcome, Source, Verification, Where, verify
 from lineproof.errors import UserError
 from lineproof.package import Package, to_pdf
 

@@ -13,7 +13,7 @@ from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 from tests.audit import verifying as by
 
-from lineproof.audit.verify import Outcome, Source, Where, verify
+from lineproof.audit.verify.verification import Outcome, Source, Where, verify
 from lineproof.errors import UserError
 from lineproof.package import build_package, to_html, to_pdf
 

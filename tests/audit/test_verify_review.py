@@ -5,10 +5,10 @@ from __future__ import annotations
 from tests.audit import verifying as by
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import Raised, Review, Reviewer
-from lineproof.audit.review_marks import marked
-from lineproof.audit.review_print import printed_review
-from lineproof.audit.verify import Outcome, verify
+from lineproof.audit.review.data import Raised, Review, Reviewer
+from lineproof.audit.review.marks import marked
+from lineproof.audit.review.print import printed_review
+from lineproof.audit.verify.verification import Outcome, verify
 from lineproof.package import Package, build_package, to_html, to_pdf
 
 AT = "2026-12-01T15:05:33Z"

@@ -12,10 +12,10 @@ from tests.audit.planting import chosen, claims_of, sheet_with, written
 from tests.audit.planting_slips import right_side
 from tests.beams.continuous import flow
 
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Claim, Verdict
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
-from lineproof.audit.slips import find_slips
+from lineproof.audit.slips.search import find_slips
 from lineproof.record import Record, recompute
 
 CLAIMS, ENTRIES = 500, 5000

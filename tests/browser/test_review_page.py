@@ -10,10 +10,10 @@ from typing import TYPE_CHECKING, Any
 import pytest
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import Raised, Review, Reviewer, State
-from lineproof.audit.review_marks import marked, stale_marks, standing
-from lineproof.audit.review_print import printed_review
-from lineproof.audit.review_read import read_review
+from lineproof.audit.review.data import Raised, Review, Reviewer, State
+from lineproof.audit.review.marks import marked, stale_marks, standing
+from lineproof.audit.review.print import printed_review
+from lineproof.audit.review.read import read_review
 from lineproof.notebook.read import read_calc
 from lineproof.package import build_package, to_html
 from lineproof.record import Record

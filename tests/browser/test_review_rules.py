@@ -11,9 +11,9 @@ from hypothesis import Phase, given, settings
 from hypothesis import strategies as st
 from tests.audit.review_random import reviews
 
-from lineproof.audit.review import Review, Reviewer
-from lineproof.audit.review_marks import marked, stale_marks, standing
-from lineproof.audit.review_merge import merge
+from lineproof.audit.review.data import Review, Reviewer
+from lineproof.audit.review.marks import marked, stale_marks, standing
+from lineproof.audit.review.merge import merge
 from lineproof.package.html import TOOLS
 from lineproof.record import Record
 from lineproof.resources import folder

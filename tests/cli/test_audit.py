@@ -16,7 +16,7 @@ from tests.audit import hand
 from tests.audit.hand import beam as hand_beam
 from tests.beams import gallery
 
-from lineproof.audit.review_read import read_review
+from lineproof.audit.review.read import read_review
 from lineproof.cli import main
 from lineproof.errors import UserError
 from lineproof.notebook.audited import picked

@@ -10,9 +10,9 @@ from typing import Any
 import pytest
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import Raised, Review, Reviewer, State
-from lineproof.audit.review_marks import TO_CHECK, marked
-from lineproof.audit.review_read import read_review
+from lineproof.audit.review.data import Raised, Review, Reviewer, State
+from lineproof.audit.review.marks import TO_CHECK, marked
+from lineproof.audit.review.read import read_review
 from lineproof.cli import main
 from lineproof.notebook.read import read_calc
 from lineproof.package import records_in_html

@@ -13,10 +13,10 @@ import pypdf
 import pytest
 
 from lineproof.audit.data import Severity
-from lineproof.audit.review import Raised, Review, Reviewer, Said, State
-from lineproof.audit.review_marks import TO_CHECK, marked, sign
-from lineproof.audit.review_print import printed_review
-from lineproof.audit.review_read import read_review
+from lineproof.audit.review.data import Raised, Review, Reviewer, Said, State
+from lineproof.audit.review.marks import TO_CHECK, marked, sign
+from lineproof.audit.review.print import printed_review
+from lineproof.audit.review.read import read_review
 from lineproof.package import build_package, records_in_html, records_in_pdf, to_html, to_pdf
 from lineproof.package.read import reviews_in_html, reviews_in_pdf
 from lineproof.record import Record

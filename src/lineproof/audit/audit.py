@@ -6,14 +6,14 @@ from collections.abc import Callable, Iterable, Sequence
 
 import numpy as np
 
+from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Audit, Claim, Finding
 from lineproof.audit.findings import findings_of, importance
 from lineproof.audit.graph import Graph
-from lineproof.audit.judge import judge
-from lineproof.audit.junior import audit_record
-from lineproof.audit.missing import missing_checks
-from lineproof.audit.slips import searching
-from lineproof.audit.traps import trap_findings
+from lineproof.audit.junior.search import audit_record
+from lineproof.audit.search.missing import missing_checks
+from lineproof.audit.search.traps import trap_findings
+from lineproof.audit.slips.search import searching
 from lineproof.record import Record
 
 SEARCHES: tuple[Callable[[Record], tuple[Finding, ...]], ...] = (

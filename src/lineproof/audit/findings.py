@@ -8,7 +8,7 @@ from dataclasses import replace
 from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdict
 from lineproof.audit.effects import effects_of, named_line
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.slips import none_fits
+from lineproof.audit.slips.search import none_fits
 
 SOURCE = "claims"
 FOUND = (

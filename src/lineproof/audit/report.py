@@ -12,9 +12,9 @@ from itertools import groupby
 from typing import Any
 
 from lineproof.audit.data import Audit, Claim, Effect, Finding, Interval, Judged, Severity, Verdict
-from lineproof.audit.drawing import SOURCE as DRAWING
 from lineproof.audit.findings import named_clause
 from lineproof.audit.graph import Graph, Node
+from lineproof.audit.search.drawing import SOURCE as DRAWING
 from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
 from lineproof.package.words import AUDIT_REPORT

@@ -8,14 +8,14 @@ import json
 import sys
 from pathlib import Path
 
-from lineproof.audit.blank import blank_table
+from lineproof.audit.claims.blank import blank_table
+from lineproof.audit.claims.tables import write_table
 from lineproof.audit.data import Audit
-from lineproof.audit.drawing import drawing_blank
-from lineproof.audit.drawing_rows import HEADINGS
 from lineproof.audit.graph import Graph
-from lineproof.audit.review import Review, Reviewer
-from lineproof.audit.review_findings import with_findings
-from lineproof.audit.tables import write_table
+from lineproof.audit.review.data import Review, Reviewer
+from lineproof.audit.review.findings import with_findings
+from lineproof.audit.search.drawing import drawing_blank
+from lineproof.audit.search.drawing_rows import HEADINGS
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.cli.files import write_all
 from lineproof.cli.review import read_file, refuse_originators

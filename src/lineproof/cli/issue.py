@@ -129,7 +129,7 @@ def _reviews(reruns: Sequence[Rerun]) -> list[PrintedReview | None]:
         if review is None:
             made.append(None)
             continue
-        from lineproof.audit.review_print import printed_review  # noqa: PLC0415 - seldom needed
+        from lineproof.audit.review.print import printed_review  # noqa: PLC0415 - seldom needed
 
         made.append(printed_review(review, record))
     faults.raise_if_any()

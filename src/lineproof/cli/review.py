@@ -20,14 +20,14 @@ from lineproof.resources import open_file
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
-    from lineproof.audit.review import Review
-    from lineproof.audit.review_marks import Standing
-    from lineproof.audit.review_merge import Merged
+    from lineproof.audit.review.data import Review
+    from lineproof.audit.review.marks import Standing
+    from lineproof.audit.review.merge import Merged
 
 
 def run(options: argparse.Namespace) -> int:
     """Show how a review stands; returns 1 while anything stands open."""
-    from lineproof.audit.review_marks import sign, standing  # noqa: PLC0415 - 0.1 s
+    from lineproof.audit.review.marks import sign, standing  # noqa: PLC0415 - 0.1 s
 
     files = options.marks or [beside(options.calc)]
     _check_places(options, files)
@@ -86,7 +86,7 @@ def _check_places(options: argparse.Namespace, files: Sequence[Path]) -> None:
 
 def _merged(files: Sequence[Path]) -> Merged:
     """Read all files and make one review of them; raises with the faults of all."""
-    from lineproof.audit.review_merge import Merged, conflicts, merge  # noqa: PLC0415 - as in run
+    from lineproof.audit.review.merge import Merged, conflicts, merge  # noqa: PLC0415 - as in run
 
     faults, reviews = FaultList(), []
     for path in files:
@@ -106,7 +106,7 @@ def _merged(files: Sequence[Path]) -> Merged:
 
 def read_file(path: Path) -> Review:
     """Read a review from its file; raises :class:`UserError` that names the file."""
-    from lineproof.audit.review_read import read_review  # noqa: PLC0415 - as in run
+    from lineproof.audit.review.read import read_review  # noqa: PLC0415 - as in run
 
     try:
         with open_file(path) as stream:
@@ -139,7 +139,7 @@ def _record_of(review: Review, records: Sequence[Record], path: Path) -> Record:
 
 def refuse_originators(review: Review, record: Record) -> None:
     """Refuse a review by who made the calculation; raises :class:`UserError`."""
-    from lineproof.audit.review_marks import refused_reviewers  # noqa: PLC0415 - as in run
+    from lineproof.audit.review.marks import refused_reviewers  # noqa: PLC0415 - as in run
 
     faults = refused_reviewers(review, record)
     if faults:
@@ -152,7 +152,7 @@ def _today() -> str:
 
 def _told(review: Review, record: Record, stands: Standing) -> Iterator[str]:
     """Give the state of a review, a line each."""
-    from lineproof.audit.review_print import printed_review  # noqa: PLC0415 - as in run
+    from lineproof.audit.review.print import printed_review  # noqa: PLC0415 - as in run
 
     printed = printed_review(review, record)
     yield f"{record.calc_id}: record {record.digest}, reviewed by {printed.reviewers or 'nobody'}"

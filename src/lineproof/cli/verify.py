@@ -16,7 +16,7 @@ from lineproof.resources import open_file
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
-    from lineproof.audit.verify import Source, Verification
+    from lineproof.audit.verify.verification import Source, Verification
 
 INTACT, ALTERED, WRONG = 0, 1, 2
 _KINDS = (".pdf", ".html", ".htm")
@@ -25,7 +25,7 @@ _LONGEST_OUTSIDE = 100
 
 def run(options: argparse.Namespace) -> int:
     """Verify a file; returns 0 if intact, 1 if altered or stripped, 2 for no package of ours."""
-    from lineproof.audit.verify import verify  # noqa: PLC0415 - 0.5 s with all that it prints
+    from lineproof.audit.verify.verification import verify  # noqa: PLC0415 - 0.5 s with all that it prints
 
     against = _sources(options.against) if options.against else []
     content = _content(options.file)
@@ -57,7 +57,7 @@ def _content(path: Path) -> bytes:
 
 def _sources(path: Path) -> list[Source]:
     """Return the records to compare with; a notebook gives its prose as well."""
-    from lineproof.audit.verify import Source  # noqa: PLC0415 - as in run
+    from lineproof.audit.verify.verification import Source  # noqa: PLC0415 - as in run
 
     if path.suffix.lower() != ".ipynb":
         return [Source(record) for record in read_records(path)]
@@ -68,7 +68,7 @@ def _sources(path: Path) -> list[Source]:
 
 
 def _code(found: Verification) -> int:
-    from lineproof.audit.verify import Outcome  # noqa: PLC0415 - as in run
+    from lineproof.audit.verify.verification import Outcome  # noqa: PLC0415 - as in run
 
     if found.outcome is Outcome.NOT_OURS:
         return WRONG
@@ -88,7 +88,7 @@ def said(found: Verification) -> Iterator[str]:
 
 def _verdict(found: Verification) -> Iterator[str]:
     """Say what the outcome means where it is not plain."""
-    from lineproof.audit.verify import Outcome  # noqa: PLC0415 - as in run
+    from lineproof.audit.verify.verification import Outcome  # noqa: PLC0415 - as in run
 
     if found.outcome is Outcome.NOT_OURS:
         yield "  no record of lineproof in it and no page that one was printed on"

@@ -8,13 +8,13 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 from lineproof.audit.audit import audit_alone, audit_claims
-from lineproof.audit.claims import read_claims
+from lineproof.audit.claims.read import read_claims
+from lineproof.audit.claims.tables import read_table
 from lineproof.audit.data import Audit, Finding
-from lineproof.audit.drawing import drawing_findings
 from lineproof.audit.findings import importance
 from lineproof.audit.graph import Graph
-from lineproof.audit.junior import Cell, audit_cells
-from lineproof.audit.tables import read_table
+from lineproof.audit.junior.search import Cell, audit_cells
+from lineproof.audit.search.drawing import drawing_findings
 from lineproof.errors import UserError
 from lineproof.notebook.cells import cells_of, joined, load_notebook
 from lineproof.notebook.read import calc_of

@@ -1,0 +1,1 @@
+"""Claims: tables read as text, what follows from them, the verdict on each."""

@@ -1,0 +1,260 @@
+"""Judging claims: each agrees, is the origin of an error, carries one, or is another valid way."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable, Container, Iterator, Mapping, Sequence
+from dataclasses import replace
+from itertools import chain
+
+from lineproof.audit.claims.other_methods import Bench, other_ways
+from lineproof.audit.claims.propagate import Form, Worker, claimed_form
+from lineproof.audit.claims.readings import Rounded, coarse_rounding, unit_slip
+from lineproof.audit.claims.safe_side import is_safe
+from lineproof.audit.claims.twins import twins_of
+from lineproof.audit.claims.worlds import Worlds, unmoved_lines
+from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
+from lineproof.audit.graph import Graph, Node
+from lineproof.record.entry import DECISION
+
+SlipFinder = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
+"""Looks for the slip behind a claim: graph, line, values used, claim, and the claimed ids."""
+
+WRONG = (Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN)
+"""Verdicts whose values make those below carry something that is not right."""
+_DIGITS = 4
+_MOVED = 1e-9
+
+
+def judge(
+    graph: Graph, claims: Sequence[Claim], find: SlipFinder | None = None
+) -> tuple[Judged, ...]:
+    """Return a judgement per claim and per value that nobody claimed, in the order of the record.
+
+    A claim is compared with what follows from the values that the claim itself uses. Where it
+    does not follow, three more readings are tried before it is called an origin: that later
+    lines were worked from right values, though a claimed one is wrong; that a value which stands
+    in several parts was changed in all; and another way, a unit or a rounding. ``find`` looks for
+    the slip behind an origin.
+    """
+    return tuple(_Judge(graph, claims, find).all())
+
+
+_LAMBDA = re.compile(r"\blambda_(?!\w)")
+"""The name of lambda in formulas, which are read as Python; a checker writes no underscore."""
+
+
+class _Judge:
+    """One run of judging; what has been judged so far decides what later claims carry."""
+
+    def __init__(self, graph: Graph, claims: Sequence[Claim], find: SlipFinder | None) -> None:
+        self.graph, self.find = graph, find
+        self.claims = {claim.id: claim for claim in claims}
+        self.worker = Worker(graph)
+        self.twins = twins_of(graph, self._deviating(), self.claims)
+        self.worlds = self._worlds()
+        worlds = [self.worlds.claimed]
+        if self.worlds.sound is not self.worlds.claimed:
+            worlds.append(self.worlds.sound)
+        self.benches = [Bench(self.worker, w, frozenset(self.claims)) for w in worlds]
+        self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
+        self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
+        self.verdicts: dict[str, Verdict] = {}
+        self.taints: dict[str, frozenset[str]] = {}
+        self.turned: dict[str, list[str]] = {}
+
+    def all(self) -> Iterator[Judged]:
+        for node in self.graph:
+            if node.kind == DECISION and node.id in self.worlds.claimed.turned:
+                self.turned.setdefault(node.part, []).append(node.id)
+            if not node.has_value:
+                continue
+            claim = self.claims.get(node.id)
+            if claim is None:
+                self._pass_on(node)
+                yield self._not_claimed(node)
+                continue
+            judged = self._input(node, claim) if not node.is_computed else self._line(node, claim)
+            self._note(node, judged)
+            yield judged
+
+    # -- the worlds ------------------------------------------------------------------------
+
+    def _deviating(self) -> list[Claim]:
+        stored = self.graph.stored
+        return [c for c in self.claims.values() if not c.stands_for.holds(stored[c.id])]
+
+    def _worlds(self) -> Worlds:
+        deviating = self._deviating()
+        stands = {claim.id: self._stands(claim) for claim in self.claims.values()}
+        needed = set(self.claims) | set(self.graph.above(self.claims))
+        claimed = self.worker.world(stands, needed)
+        right = {claim.id: self._put_right(claim) for claim in deviating}
+        sound = self.worker.world(stands | right, needed, claimed) if deviating else claimed
+        copies = {copy: stands[claimed_id] for copy, claimed_id in self.twins.items()}
+        twin = self.worker.world(stands | copies, needed, claimed) if copies else claimed
+        return Worlds(claimed, sound, twin)
+
+    def _stands(self, claim: Claim) -> Form:
+        node, right = self.graph[claim.id], self.graph.stored[claim.id]
+        if node.is_computed:
+            return claimed_form(claim.id, claim.stands_for)
+        if not claim.stands_for.holds(right):
+            return Form(claim.value)  # an input is used as it was typed
+        same = Interval(right, right).holds(claim.value)
+        return Form(right) if same else claimed_form(claim.id, claim.stands_for)
+
+    def _put_right(self, claim: Claim) -> Form:
+        right = self.graph.stored[claim.id]
+        if not self.graph[claim.id].is_computed:
+            return Form(right)
+        return Form(right, {claim.id: claim.stands_for.half})
+
+    # -- verdicts --------------------------------------------------------------------------
+
+    def _not_claimed(self, node: Node) -> Judged:
+        interval = self.worlds.claimed.used[node.id].interval
+        return Judged(node.id, Verdict.NOT_CLAIMED, None, interval, self.graph.stored[node.id])
+
+    def _input(self, node: Node, claim: Claim) -> Judged:
+        right = self.graph.stored[node.id]
+        point = Interval(right, right)
+        made = Judged(node.id, Verdict.AGREES, claim, point, right)
+        if claim.stands_for.holds(right):
+            return made
+        other = self._other_way(node, claim)
+        if other is not None:
+            return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
+        slip = unit_slip(claim, [point])
+        said = f"the calc has {self._shown(node, right)}"
+        if slip is not None:
+            return replace(
+                made, verdict=Verdict.UNIT, note=f"{slip.sentence}; {said}", slips=(slip,)
+            )
+        return replace(made, verdict=Verdict.INPUT, note=said)
+
+    def _line(self, node: Node, claim: Claim) -> Judged:
+        worlds, right, stands = self.worlds, self.graph.stored[node.id], claim.stands_for
+        follows = worlds.claimed.follows[node.id].interval
+        made = Judged(node.id, Verdict.AGREES, claim, follows, right)
+        is_right, by_used = stands.holds(right), stands.meets(follows)
+        by_sound = stands.meets(worlds.sound.follows[node.id].interval)
+        if by_used and (by_sound or is_right):
+            return made
+        if not by_used and (by_sound or is_right):
+            return self._right_alone(node, claim, made)
+        if node.id in worlds.claimed.failed:
+            why = worlds.claimed.failed[node.id]
+            note = f"cannot be worked with the values claimed ({why})"
+            return replace(made, verdict=Verdict.UNKNOWN, note=note)
+        if by_used or stands.meets(worlds.twin.follows[node.id].interval):
+            return self._carried(node, made)
+        return self._unexplained(node, claim, made)
+
+    def _right_alone(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        """Judge a line that is right, or follows from right values, but not from those claimed."""
+        if node.id in self.unmoved:
+            return self._not_changed_with(node, claim, made)
+        note = "right, though it does not follow from the values claimed"
+        if not claim.stands_for.holds(made.right):
+            note = "follows from the right values, not from all those claimed"
+        return replace(made, note=note)
+
+    def _not_changed_with(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        """Judge a line that kept the value of the recorded input while its input was changed."""
+        inputs = self._named(self.unmoved[node.id])
+        note = f"is the value for other inputs than claimed: not changed with {inputs}"
+        return replace(made, verdict=Verdict.ORIGIN, note=note, slips=self._slips(node, claim))
+
+    def _carried(self, node: Node, made: Judged) -> Judged:
+        causes = self._causes(node)
+        # A twin may stand before the line whose claim it repeats, which is judged later.
+        wrong = tuple(i for i in causes if self.verdicts.get(i, Verdict.INPUT) in WRONG)
+        if wrong:
+            note = f"follows from {self._named(wrong)}"
+            return replace(made, verdict=Verdict.CARRIED, note=note, causes=wrong)
+        note = f"follows from {self._named(causes)} as claimed" if causes else ""
+        return replace(made, note=note, causes=causes)
+
+    def _unexplained(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        around = [made.follows, self.worlds.sound.follows[node.id].interval]
+        slip = unit_slip(claim, around)
+        if slip is not None:
+            return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
+        other = self._other_way(node, claim)
+        if other is not None:
+            return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
+        rounded = coarse_rounding(claim, around)
+        if rounded is not None:
+            return self._rounded(node, claim, made, rounded)
+        turned = self.turned.get(node.part)
+        if turned:
+            note = f"{self._turns(turned[-1])}, so that other expressions apply to this line"
+            return replace(made, verdict=Verdict.UNKNOWN, note=note, causes=self._causes(node))
+        return replace(made, verdict=Verdict.ORIGIN, slips=self._slips(node, claim))
+
+    def _other_way(self, node: Node, claim: Claim) -> str | None:
+        """Return the sentence of the other valid way that gives a claim, if one does."""
+        ways = chain.from_iterable(other_ways(bench, node) for bench in self.benches)
+        met = (way.sentence for way in ways if claim.stands_for.meets(way.interval))
+        return next(met, None)
+
+    def _turns(self, decision: str) -> str:
+        node = self.graph[decision]
+        formula = node.entry["formula"]
+        state = "no longer holds" if node.entry["holds"] else "holds"
+        return f"with the values claimed {formula} ({node.label}) {state}"
+
+    def _rounded(self, node: Node, claim: Claim, made: Judged, rounded: Rounded) -> Judged:
+        way = "up" if rounded.up else "down"
+        shown = self._shown(node, rounded.of, _DIGITS + 1)
+        note = f"{shown} rounded {way} to a step of {rounded.step} {claim.unit}".rstrip()
+        if is_safe(self.graph, node.id, claim.value, rounded.of):
+            return replace(made, verdict=Verdict.SAFE_ROUNDING, note=f"{note}: conservative")
+        return replace(
+            made, verdict=Verdict.UNSAFE_ROUNDING, note=f"{note}: not conservative",
+            slips=self._slips(node, claim),
+        )  # fmt: skip
+
+    def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
+        if self.find is None:
+            return ()
+        slips = self.find(self.graph, node.id, self.used, claim, frozenset(self.claims))
+        return tuple(replace(slip, sentence=_LAMBDA.sub("lambda", slip.sentence)) for slip in slips)
+
+    # -- what later lines carry ------------------------------------------------------------
+
+    def _causes(self, node: Node) -> tuple[str, ...]:
+        found: set[str] = set()
+        for target in node.args.values():
+            found |= self.taints.get(target, frozenset())
+        return tuple(i for i in self.claims if i in found)
+
+    def _note(self, node: Node, judged: Judged) -> None:
+        self.verdicts[node.id] = judged.verdict
+        if judged.verdict is Verdict.AGREES or judged.verdict is Verdict.CARRIED:
+            if judged.causes:
+                self.taints[node.id] = frozenset(judged.causes)
+        else:
+            self.taints[node.id] = frozenset((node.id,))
+
+    def _pass_on(self, node: Node) -> None:
+        """Let a line that nobody claimed carry on what moves it."""
+        found = frozenset().union(*(self.taints.get(t, ()) for t in node.args.values()))
+        if node.id in self.twins:
+            found |= {self.twins[node.id]}
+        if found and self._is_moved(node.id):
+            self.taints[node.id] = found
+
+    def _is_moved(self, entry_id: str) -> bool:
+        sound = self.worlds.sound.used[entry_id].middle
+        others = (self.worlds.claimed.used[entry_id], self.worlds.twin.used[entry_id])
+        return any(abs(form.middle - sound) > _MOVED * abs(sound) for form in others)
+
+    # -- words -----------------------------------------------------------------------------
+
+    def _named(self, ids: Sequence[str]) -> str:
+        return ", ".join(f"{self.graph[i].symbol} ({self.graph[i].label})" for i in ids)
+
+    def _shown(self, node: Node, value: float, digits: int = _DIGITS) -> str:
+        return f"{node.number_text(value, digits)} {node.unit}".rstrip()

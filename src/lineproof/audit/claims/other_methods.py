@@ -1,0 +1,257 @@
+"""Other ways to a value that the standard allows, and handbook tables read by hand.
+
+A claim that one of these gives is no error. Each way says in a sentence what was done, and gives
+the interval that follows by it from the values that the claim itself uses.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator, Mapping
+from dataclasses import dataclass
+
+from lineproof.audit.claims.coefficient_moments import by_coefficients
+from lineproof.audit.claims.propagate import Form, Worker, World, combined
+from lineproof.audit.data import Interval
+from lineproof.audit.graph import Graph, Node
+from lineproof.formula import names_of, parse_line
+from lineproof.formula.compiled import compile_tree
+from lineproof.quantity.digits import significant
+from lineproof.record.entry import LINE, LOOKUP
+
+_CANNOT = (ArithmeticError, ValueError, TypeError)
+_PAIRS = {
+    "beta": "beta_g", "theta": "theta_g", "V_c": "V_cg", "V_s": "V_sg", "V_r": "V_rg",
+}  # fmt: skip
+"""Shear lines and, in the same part, those by the method that was not chosen."""
+_DEVELOPMENT = {"l_d0": ("l_d0g", "l_d0t")}
+_SIMPLIFIED = {"beta": 0.18, "theta": 35.0}
+"""A23.3, 11.3.6.3: with the minimum of stirrups or more."""
+_SIMPLIFIED_YIELD, _SIMPLIFIED_CONCRETE = 400.0, 60.0
+_MODULI = ("E_c = 4500*sqrt(f_c)", "E_c = (3300*sqrt(f_c) + 6900)*(gamma_c/2300)**1.5")
+"""A23.3, 8.6.2.3 and 8.6.2.2."""
+_MODULUS_CONCRETE = 40.0
+_WIDTHS = ("b", "b_f", "b_w")
+_TABLE_DECIMALS = 1
+_LEAST_READ = 1.0
+"""A table of K_r [MPa] is read by hand to a tenth, which is two digits from 1 up."""
+_RATIO_DECIMALS = 4
+"""Decimals to which tables give a ratio of reinforcement."""
+_ROUNDING = 1e-9
+
+
+@dataclass(frozen=True, slots=True)
+class Other:
+    """What another way gives, and the sentence that names it."""
+
+    sentence: str
+    interval: Interval
+
+
+@dataclass(frozen=True, slots=True)
+class Bench:
+    """What the ways work with: the graph, its functions, the world as claimed, the claimed ids."""
+
+    worker: Worker
+    world: World
+    claimed: frozenset[str]
+
+    @property
+    def graph(self) -> Graph:
+        """The record as a graph."""
+        return self.worker.graph
+
+    def reworked(self, node: Node, swapped: Mapping[str, Form]) -> Form:
+        """Work a line with other forms of some that it rests on; claimed lines stay as claimed."""
+        if node.id in swapped:
+            return swapped[node.id]
+        made = dict(self.world.used) | dict(swapped)
+        moved = set(self.graph.below(swapped))
+        between = (moved & set(self.graph.above([node.id]))) - self.claimed - set(swapped)
+        for entry_id in self.graph.nodes:
+            if entry_id in between and self.graph[entry_id].is_computed:
+                made[entry_id] = self.worker.form(self.graph[entry_id], made)
+        return self.worker.form(node, made)
+
+    def beside(self, node: Node, symbol: str) -> Form | None:
+        """Return the form of a symbol in the part of a line, if it stands there."""
+        return self.world.used.get(f"{node.part}/{symbol}")
+
+    def above(self, node: Node, symbols: tuple[str, ...]) -> Form | None:
+        """Return the form of the first of some names that a line, or what it rests on, uses.
+
+        Looked for in the line, in those that it names, and in those above in the same part.
+        """
+        above = [self.graph[i] for i in reversed(self.graph.above([node.id]))]
+        named = set(node.args.values())
+        near = [node, *(n for n in above if n.id in named or n.part == node.part)]
+        for symbol in symbols:
+            for user in near:
+                if symbol in user.args:
+                    return self.world.used[user.args[symbol]]
+        return None
+
+
+def other_ways(bench: Bench, node: Node) -> Iterator[Other]:
+    """Give what every other way to a line's value gives; ways that do not apply give nothing."""
+    for way in _WAYS if node.is_computed else (_shear,):
+        try:
+            yield from way(bench, node)
+        except _CANNOT:
+            continue
+
+
+def _shear(bench: Bench, node: Node) -> Iterator[Other]:
+    swapped = _recorded_pairs(bench, node) or _simplified(bench, node)
+    if not swapped:
+        return
+    part = bench.graph[next(iter(swapped))].part
+    factor = bench.graph.nodes.get(f"{part}/beta")
+    general = factor is not None and factor.kind == LOOKUP
+    name = "general method of 11.3.6.4" if general else "simplified method of 11.3.6.3"
+    yield Other(
+        f"follows by the {name}, which the standard allows as well",
+        bench.reworked(node, swapped).interval,
+    )
+
+
+def _parts_above(bench: Bench, node: Node, *symbols: str) -> Iterator[str]:
+    """Give the parts in which a line or what it rests on holds a symbol, the nearest first."""
+    for entry_id in (node.id, *reversed(bench.graph.above([node.id]))):
+        other = bench.graph[entry_id]
+        if other.symbol in symbols and other.has_value:
+            yield other.part
+
+
+def _recorded_pairs(bench: Bench, node: Node) -> dict[str, Form]:
+    for part in _parts_above(bench, node, "beta", "theta"):
+        if f"{part}/beta_g" in bench.graph.nodes:
+            return {
+                f"{part}/{mine}": bench.world.used[f"{part}/{other}"]
+                for mine, other in _PAIRS.items()
+                if f"{part}/{other}" in bench.graph.nodes and f"{part}/{mine}" in bench.graph.nodes
+            }
+    return {}
+
+
+def _simplified(bench: Bench, node: Node) -> dict[str, Form]:
+    """Return beta and theta of the simplified method where the record has the general one alone."""
+    for part in _parts_above(bench, node, "beta", "theta"):
+        beta = bench.graph.nodes.get(f"{part}/beta")
+        strengths = [bench.above(bench.graph[node.id], (s,)) for s in ("f_y", "f_c")]
+        limits = (_SIMPLIFIED_YIELD, _SIMPLIFIED_CONCRETE)
+        within = all(
+            form is None or form.middle <= most
+            for form, most in zip(strengths, limits, strict=True)
+        )
+        with_stirrups = beta is not None and beta.kind == LINE and "s_ze" not in beta.args
+        if within and with_stirrups:
+            return {
+                f"{part}/{symbol}": Form(value)
+                for symbol, value in _SIMPLIFIED.items()
+                if f"{part}/{symbol}" in bench.graph.nodes
+            }
+    return {}
+
+
+def _development(bench: Bench, node: Node) -> Iterator[Other]:
+    for mine, others in _DEVELOPMENT.items():
+        for part in _parts_above(bench, node, mine):
+            for other in others:
+                if f"{part}/{other}" in bench.graph.nodes:
+                    swapped = {f"{part}/{mine}": bench.world.used[f"{part}/{other}"]}
+                    name = "general expression of 12.2.2" if other == "l_d0g" else "table of 12.2.3"
+                    yield Other(
+                        f"follows by the {name}, which the standard allows as well",
+                        bench.reworked(node, swapped).interval,
+                    )
+
+
+def _modulus(bench: Bench, node: Node) -> Iterator[Other]:
+    for part in _parts_above(bench, node, "E_c"):
+        made = bench.graph[f"{part}/E_c"]
+        strength = bench.above(made, ("f_c",))
+        if made.kind != LINE or strength is None or strength.middle > _MODULUS_CONCRETE:
+            continue
+        density = bench.world.used.get(made.args.get("gamma_c", "given/gamma_c"))
+        recorded = str(made.entry["formula"]).replace(" ", "")
+        if recorded == _MODULI[0].replace(" ", ""):
+            if density is None:
+                continue
+            forms, text, clause = [strength, density], _MODULI[1], "8.6.2.2"
+        elif recorded == _MODULI[1].replace(" ", ""):
+            forms, text, clause = [strength], _MODULI[0], "8.6.2.3"
+        else:
+            continue
+        swapped = {made.id: combined(_function(text), forms)}
+        yield Other(
+            f"follows with the modulus of elasticity by {clause}, which the standard allows as"
+            " well",
+            bench.reworked(node, swapped).interval,
+        )
+
+
+def _function(text: str) -> Callable[..., float]:
+    tree = parse_line(text)[1]
+    return compile_tree(tree, names_of(tree))
+
+
+def _midspan_inertia(bench: Bench, node: Node) -> Iterator[Other]:
+    for part in _parts_above(bench, node, "I_ea"):
+        middle = bench.world.used.get(f"{part}/I_em")
+        if middle is not None:
+            yield Other(
+                "follows with the moment of inertia at midspan alone, which 9.8.2.4 allows for "
+                "prismatic members",
+                bench.reworked(node, {f"{part}/I_ea": middle}).interval,
+            )
+
+
+def _table_resistance(bench: Bench, node: Node) -> Iterator[Other]:
+    """M_r = K_r b d^2 with K_r read from a table to two digits."""
+    if node.symbol != "M_r" or node.unit not in ("kN.m", "N.mm", "kip.ft", "kip.in"):
+        return
+    width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
+    if width is None or depth is None:
+        return
+    scale = combined(lambda b, d: b * d**2, [width, depth])
+    factor = combined(lambda m, s: m / s, [bench.world.follows[node.id], Form(scale.middle)])
+    for read in _readings(factor.interval, _TABLE_DECIMALS):
+        if read >= _LEAST_READ:
+            yield Other(
+                f"follows with K_r read from a table as {read:g} (two digits) in M_r = K_r b d2",
+                scale.interval.times(read),
+            )
+
+
+def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
+    """A_s = rho b d with rho read from a table to four decimals."""
+    if not node.symbol.startswith("A_s") or node.unit not in ("mm2", "in2"):
+        return
+    width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
+    if width is None or depth is None:
+        return
+    area = combined(lambda b, d: b * d, [width, depth])
+    ratio = combined(lambda a, s: a / s, [bench.world.follows[node.id], Form(area.middle)])
+    for read in _readings(ratio.interval, _RATIO_DECIMALS):
+        if read >= 10 ** (1 - _RATIO_DECIMALS):  # two digits at least
+            yield Other(
+                f"follows with the ratio read from a table as {read:g} in A_s = rho b d",
+                area.interval.times(read),
+            )
+
+
+def _readings(interval: Interval, decimals: int) -> tuple[float, ...]:
+    """Return a table's readings, to so many decimals, of a number somewhere in an interval."""
+    ends = (interval.low * (1 - _ROUNDING), interval.middle, interval.high * (1 + _ROUNDING))
+    return tuple(dict.fromkeys(float(significant(end, -decimals)) for end in ends))
+
+
+def _coefficients(bench: Bench, node: Node) -> Iterator[Other]:
+    for sentence, interval in by_coefficients(bench.graph, bench.world.used, node):
+        yield Other(sentence, interval)
+
+
+_WAYS: tuple[Callable[[Bench, Node], Iterator[Other]], ...] = (
+    _shear, _development, _modulus, _midspan_inertia, _table_resistance, _table_ratio,
+    _coefficients,
+)  # fmt: skip

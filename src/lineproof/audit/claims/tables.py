@@ -1,0 +1,225 @@
+"""Reading a table of claims, CSV or .xlsx, as text with row numbers; writing one that is safe.
+
+Nothing of a table is ever computed: a cell that is a formula is refused, a workbook with macros
+as well, and the sizes in a workbook's directory are looked at before anything is unpacked.
+"""
+
+from __future__ import annotations
+
+import codecs
+import csv
+import io
+import re
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
+from pathlib import Path
+
+from lineproof.audit.claims.workbooks import read_workbook, workbook_bytes
+from lineproof.errors import FaultList, UserError
+from lineproof.quantity import echo
+from lineproof.resources import open_file
+
+MOST_BYTES = 20_000_000
+MOST_ROWS = 20_000
+"""Rows of a table: more than ten times those of the longest record."""
+MOST_COLUMNS = 60
+LONGEST_CELL = 500
+MOST_FAULTS = 40
+XLSX, CSV = ".xlsx", ".csv"
+_MACROS = (".xlsm", ".xltm", ".xlam", ".xlsb")
+_NUMBER = re.compile(r"[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d{1,3})?", re.ASCII)
+_STARTS = ("=", "+", "-", "@", "\t", "\r", "\n", "＝", "＋", "－", "＠")
+"""With one of these a spreadsheet takes a cell for a formula."""
+_UTF_16 = (codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE)
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """One row: its number as the spreadsheet shows it, and its cells by lower-case heading."""
+
+    number: int
+    cells: dict[str, str]
+
+
+@dataclass(frozen=True, slots=True)
+class Table:
+    """A table read: the name that stands for it in messages, its headings, its rows."""
+
+    name: str
+    headings: tuple[str, ...]
+    rows: tuple[Row, ...]
+
+
+class TableFaults(FaultList):
+    """Faults of one table; after the first forty only their number is told."""
+
+    def __init__(self, name: str) -> None:
+        super().__init__()
+        self.name = name
+
+    def at(self, row: int, column: str, fault: str) -> None:
+        """Note a fault of one cell."""
+        self.add(f"{self.name}: row {row}, {column}: {fault}")
+
+    def raise_if_any(self) -> None:
+        """Raise the first faults and the number of the others."""
+        if len(self.faults) > MOST_FAULTS:
+            more = len(self.faults) - MOST_FAULTS
+            raise UserError([*self.faults[:MOST_FAULTS], f"{self.name}: and {more} faults more"])
+        super().raise_if_any()
+
+
+def read_table(path: Path) -> Table:
+    """Read a table by the ending of its file name; its first row holds the headings.
+
+    Raises :class:`UserError` with every fault: formulas, merged cells, macros, a file that is too
+    large or no table at all.
+    """
+    table, faults = read_with_faults(path)
+    faults.raise_if_any()
+    return table
+
+
+def read_with_faults(path: Path) -> tuple[Table, TableFaults]:
+    """Read a table and the faults of its cells, so that a reader can tell its own with them.
+
+    Raises :class:`UserError` at once for what is no table.
+    """
+    name, ending = str(path), path.suffix.lower()
+    if ending in _MACROS:
+        raise UserError(f"{name}: a workbook that may hold macros; save it as .xlsx without them")
+    if ending not in (CSV, XLSX):
+        raise UserError(f"{name}: neither .csv nor .xlsx; save the table as one of them")
+    content = _content(path, name)
+    if not content.strip():
+        raise UserError(f"{name}: the file is empty; let 'lineproof audit --blank' write a table")
+    raw = read_workbook(content, name) if ending == XLSX else _csv_rows(content, name)
+    return _table(name, raw)
+
+
+def _content(path: Path, name: str) -> bytes:
+    try:
+        with open_file(path) as stream:
+            content = stream.read(MOST_BYTES + 1)
+    except OSError as error:
+        raise UserError(f"{name}: cannot be read ({error.strerror})") from None
+    if len(content) > MOST_BYTES:
+        raise UserError(f"{name}: larger than {MOST_BYTES // 1_000_000} MB; keep the claims alone")
+    return content
+
+
+def _csv_rows(content: bytes, name: str) -> Iterator[list[str]]:
+    text = _text(content, name)
+    reader = csv.reader(io.StringIO(text, newline=""), delimiter=_delimiter(text), strict=True)
+    try:
+        yield from reader
+    except csv.Error as error:
+        raise UserError(
+            f"{name}: row {reader.line_num}: no CSV ({error}); save it as 'CSV UTF-8'"
+        ) from None
+
+
+def _text(content: bytes, name: str) -> str:
+    if content.startswith(_UTF_16):
+        raise UserError(f"{name}: UTF-16 text; save it as 'CSV UTF-8'")
+    if content.startswith(b"PK"):
+        raise UserError(f"{name}: a workbook with the ending .csv; rename it to .xlsx")
+    try:
+        text = content.decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        raise UserError(
+            f"{name}: not UTF-8 at byte {error.start}; save it as 'CSV UTF-8'"
+        ) from None
+    if "\0" in text:
+        raise UserError(f"{name}: holds zero bytes; it is no text, save it as 'CSV UTF-8'")
+    return text
+
+
+def _delimiter(text: str) -> str:
+    """Return the mark between the cells of the first row."""
+    first = text.split("\n", maxsplit=1)[0]
+    return max((",", ";", "\t"), key=first.count)
+
+
+def _table(name: str, raw: Iterator[list[str]]) -> tuple[Table, TableFaults]:
+    """Check the shape of the rows and put their cells under the headings."""
+    faults = TableFaults(name)
+    headings = _headings(next(raw, []), faults)
+    rows = []
+    for number, cells in enumerate(raw, start=2):
+        if not any(cell.strip() for cell in cells):
+            continue
+        if number > MOST_ROWS + 1:
+            faults.add(
+                f"{name}: more than {MOST_ROWS:,} rows; keep one row for each claim".replace(
+                    ",", " "
+                )
+            )
+            break
+        rows.append(Row(number, _cells(number, cells, headings, faults)))
+    return Table(name, headings, tuple(rows)), faults
+
+
+def _headings(cells: Sequence[str], faults: TableFaults) -> tuple[str, ...]:
+    made = [" ".join(cell.split()).lower() for cell in cells]
+    while made and not made[-1]:
+        made.pop()
+    if not made:
+        raise UserError(f"{faults.name}: row 1 holds no headings; write 'id,claimed,unit'")
+    if len(made) > MOST_COLUMNS:
+        raise UserError(f"{faults.name}: more than {MOST_COLUMNS} columns; keep the claims alone")
+    for heading in dict.fromkeys(h for h in made if h and made.count(h) > 1):
+        faults.add(f"{faults.name}: row 1: heading {echo(heading)} stands twice; keep one")
+    return tuple(made)
+
+
+def _cells(
+    number: int, cells: Sequence[str], headings: Sequence[str], faults: TableFaults
+) -> dict[str, str]:
+    found: dict[str, str] = {}
+    for at, cell in enumerate(cells):
+        text = cell.strip()
+        if not text:
+            continue
+        column = (headings[at] if at < len(headings) else "") or f"column {at + 1}"
+        if len(text) > LONGEST_CELL:
+            faults.at(number, column, f"holds more than {LONGEST_CELL} characters; shorten it")
+        elif text.startswith(("=", "＝", "@", "＠")):
+            faults.at(number, column, f"{echo(text)} is a formula; write the value that it shows")
+        elif at >= len(headings):
+            faults.at(number, column, f"{echo(text)} stands beyond the last heading; name it")
+        else:
+            found[column] = _without_apostrophe(text)
+    return found
+
+
+def _without_apostrophe(text: str) -> str:
+    """Return a cell without the apostrophe that kept it from being a formula."""
+    return text[1:] if text.startswith("'") and text[1:].lstrip().startswith(_STARTS) else text
+
+
+def write_table(headings: Sequence[str], rows: Sequence[Sequence[str]], ending: str) -> bytes:
+    """Return a table as CSV or .xlsx (by ``ending``) in which no cell starts a formula.
+
+    The cells of a workbook keep what is typed in them as text: 0.50 stays 0.50.
+    """
+    safe = [[_safe(cell) for cell in row] for row in rows]
+    if ending.lower() == XLSX:
+        return workbook_bytes(headings, safe)
+    if ending.lower() != CSV:
+        raise UserError(f"{ending!r} is no ending of a table; write a name in .csv or .xlsx")
+    stream = io.StringIO(newline="")
+    writer = csv.writer(stream, lineterminator="\r\n")
+    writer.writerows([[_safe(heading) for heading in headings], *safe])
+    return codecs.BOM_UTF8 + stream.getvalue().encode()
+
+
+def _safe(text: str) -> str:
+    """Return a cell that a spreadsheet reads as a number or as text, never as a formula.
+
+    >>> _safe("=1+1"), _safe("-12.5"), _safe("-x")
+    ("'=1+1", '-12.5', "'-x")
+    """
+    if _NUMBER.fullmatch(text):
+        return text
+    return f"'{text}" if text.lstrip(" ").startswith(_STARTS) else text

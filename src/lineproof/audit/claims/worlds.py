@@ -1,0 +1,67 @@
+"""Worlds of claims: as claimed, put right, changed in all parts; inputs that were really used."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from lineproof.audit.claims.propagate import World
+from lineproof.audit.data import Claim
+from lineproof.audit.graph import Graph, Node
+
+
+@dataclass(frozen=True, slots=True)
+class Worlds:
+    """The record worked with values as claimed, with wrong ones put right, and with twins."""
+
+    claimed: World
+    sound: World
+    twin: World
+
+
+def unmoved_lines(
+    graph: Graph, claims: Mapping[str, Claim], worlds: Worlds
+) -> dict[str, tuple[str, ...]]:
+    """Return lines that kept the recorded value although an input that they use was changed.
+
+    By line the ids of these inputs. An input counts as changed where one of its lines follows it,
+    where one line alone rests on it, or where it is a count, of bars or legs, and the area is that
+    of another count; where several lines rest on it and none follows, it was written wrongly.
+    """
+    found: dict[str, list[str]] = {}
+    for claim in claims.values():
+        if graph[claim.id].is_computed or claim.stands_for.holds(graph.stored[claim.id]):
+            continue
+        lines = [i for i in _next_claimed(graph, claim.id, claims) if _is_moved(i, worlds)]
+        follow = [i for i in lines if _follows(claims[i], worlds)]
+        if follow or len(lines) == 1 or _is_count(graph[claim.id]):
+            for entry_id in lines:
+                if entry_id not in follow:
+                    found.setdefault(entry_id, []).append(claim.id)
+    return {entry_id: tuple(ids) for entry_id, ids in found.items()}
+
+
+def _is_count(node: Node) -> bool:
+    return not node.unit and node.symbol.startswith("n_") and node.stored == int(node.stored)
+
+
+def _next_claimed(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> list[str]:
+    """Return the claimed lines that rest on one by lines that nobody claimed."""
+    waiting, found = [entry_id], list[str]()
+    seen: set[str] = set()
+    while waiting:
+        for user in graph.users[waiting.pop()]:
+            if user in seen or not graph[user].has_value:
+                continue
+            seen.add(user)
+            (found if user in claims else waiting).append(user)
+    return found
+
+
+def _is_moved(entry_id: str, worlds: Worlds) -> bool:
+    claimed, sound = (w.follows[entry_id].interval for w in (worlds.claimed, worlds.sound))
+    return not claimed.meets(sound)
+
+
+def _follows(claim: Claim, worlds: Worlds) -> bool:
+    return claim.stands_for.meets(worlds.claimed.follows[claim.id].interval)

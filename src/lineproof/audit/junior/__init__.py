@@ -1,0 +1,1 @@
+"""Another engineer's notebook or record, read without running any of it."""

@@ -1,0 +1,61 @@
+"""Rules of other standards and earlier editions that are met in hand calculations."""
+
+from __future__ import annotations
+
+from functools import cache
+
+from lineproof.audit.junior.sample import equal, points_for, sampled
+from lineproof.formula import Tree, names_of, parse_line
+
+_ROWS = (
+    # formula, whose rule it is; MPa and mm throughout. From memory, as a checker knows them.
+    ("V_c = 0.2*lambda_*phi_c*sqrt(f_c)*b_w*d", "A23.3-94, simplified method"),
+    ("V_c = 0.2*phi_c*sqrt(f_c)*b_w*d", "A23.3-94, simplified method"),
+    ("V_c = 0.17*lambda_*sqrt(f_c)*b_w*d", "ACI 318"),
+    ("V_c = 0.17*sqrt(f_c)*b_w*d", "ACI 318"),
+    ("V_s = A_v*f_y*d/s", "ACI 318, bars at 45 degrees"),
+    ("V_s = phi_s*A_v*f_y*d/s", "A23.3-94, bars at 45 degrees"),
+    ("a = A_s*f_y/(0.85*f_c*b)", "ACI 318"),
+    ("a = A_s*f_y/(0.85*f_c*b_w)", "ACI 318"),
+    ("a = phi_s*A_s*f_y/(0.85*phi_c*f_c*b)", "A23.3-84"),
+    ("a = phi_s*A_s*f_y/(0.85*phi_c*f_c*b_w)", "A23.3-84"),
+    ("M_r = 0.9*A_s*f_y*(d - a/2)", "ACI 318"),
+    ("E_c = 5000*sqrt(f_c)", "A23.3-84"),
+    ("E_c = 4700*sqrt(f_c)", "ACI 318"),
+    ("f_r = 0.62*lambda_*sqrt(f_c)", "ACI 318"),
+    ("f_r = 0.62*sqrt(f_c)", "ACI 318"),
+    ("f_rd = f_r", "A23.3-04 and earlier for beams: the modulus of rupture not halved"),
+    ("beta_1 = 0.85 - 0.05*(f_c - 28)/7", "ACI 318"),
+    ("A_smin = 1.4*b_w*d/f_y", "ACI 318 and A23.3-84"),
+    ("A_smin = 0.25*sqrt(f_c)*b_w*d/f_y", "ACI 318"),
+    ("A_smin = max(0.25*sqrt(f_c), 1.4)*b_w*d/f_y", "ACI 318"),
+    ("A_vmin = 0.35*b_w*s/f_y", "A23.3-84 and ACI 318"),
+    ("s_max = d/2", "ACI 318"),
+    ("s_max = min(d/2, 600)", "ACI 318"),
+    ("w_f2 = 1.2*w_D + 1.6*w_L", "ASCE 7"),
+    ("w_f2 = 1.4*w_D + 1.7*w_L", "ACI 318-99 and earlier"),
+    ("w_f2 = 1.25*w_D + 1.5*w_L + 0.5*w_S", "NBC 2005 and 2010, companion loads"),
+    ("w_f3 = 1.25*w_D + 1.5*w_S + 0.5*w_L", "NBC 2005 and 2010, companion loads"),
+    ("w_f = 1.2*w_D + 1.6*w_L", "ASCE 7"),
+    ("w_f = 1.4*w_D + 1.7*w_L", "ACI 318-99 and earlier"),
+)
+
+
+@cache
+def _rules() -> dict[str, tuple[tuple[Tree, str], ...]]:
+    found: dict[str, tuple[tuple[Tree, str], ...]] = {}
+    for text, whose in _ROWS:
+        symbol, tree = parse_line(text)
+        found[symbol] = (*found.get(symbol, ()), (tree, whose))
+    return found
+
+
+def foreign_rule(symbol: str, tree: Tree) -> str:
+    """Return whose rule a formula is, if it is one of those known here, else ""."""
+    names = set(names_of(tree))
+    for rule, whose in _rules().get(symbol, ()):
+        if names and set(names_of(rule)) == names:
+            points = points_for(names)
+            if equal(sampled(tree, points), sampled(rule, points)):
+                return whose
+    return ""

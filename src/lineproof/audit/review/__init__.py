@@ -1,0 +1,1 @@
+"""Marks, findings and sign-off of a review; merging; how they print."""

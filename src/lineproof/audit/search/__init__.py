@@ -1,0 +1,1 @@
+"""Searches of a record: drawing against calc, missing checks, traps."""

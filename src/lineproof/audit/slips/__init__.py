@@ -1,0 +1,1 @@
+"""The single slips that reproduce a claimed value, ranked."""

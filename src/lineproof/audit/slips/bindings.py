@@ -1,0 +1,49 @@
+"""Slips that put another value where a quantity stands in a formula or goes into a procedure."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from lineproof.audit.slips.edits import TOP, Edit, Line
+from lineproof.audit.slips.tree import FAILURES, real
+from lineproof.audit.slips.values import others_for
+from lineproof.errors import UserError
+
+ONE_OF_MANY = 0.7
+"""A slip at one place of a quantity that stands at several is less likely by so much."""
+AT_ONE = frozenset(("pair", "kin", "near", "unit"))
+"""Families that are tried at each place of a quantity by itself as well."""
+OF_FOUND = frozenset((
+    "pair", "mirror", "clear span", "service", "factored", "tributary", "edition", "unit",
+    "swapped", "bar count", "legs", "diameter", "bar size",
+))  # fmt: skip
+"""Families tried in the arguments of a found value, each at the cost of a run."""
+
+
+def edits_of_bindings(line: Line) -> Iterator[Edit]:
+    """Give every edit that puts another value where a quantity stands in a line's formula."""
+    for name, target in line.node.args.items():
+        at = line.places.uses(name)
+        if not at or target not in line.scope.units:
+            continue
+        ways = [tuple(at)] + ([(k,) for k in at] if len(at) > 1 else [])
+        for other in others_for(line, target, name):
+            for places in ways if other.family in AT_ONE else ways[:1]:
+                far = other.far + (ONE_OF_MANY if len(places) < len(at) else 0.0)
+                yield Edit(other.family, places, other.value, other.half, other.words, far)
+
+
+def edits_of_arguments(line: Line) -> Iterator[Edit]:
+    """Give the edits of a found value: its procedure run with another value for one argument."""
+    named = {name: line.pairs[target][0] for name, target in line.node.args.items()}
+    value, half = line.pair(0)
+    relative = half / abs(value) if value else 0.0
+    for name, target in line.node.args.items():
+        for other in others_for(line, target, name):
+            if other.family not in OF_FOUND:
+                continue
+            try:
+                made = real(line.node.compute(named | {name: other.value}))
+            except (*FAILURES, UserError):
+                continue
+            yield Edit(other.family, TOP, made, abs(made) * relative, other.words, other.far)

@@ -1,0 +1,126 @@
+"""Which slips a checker would name first."""
+
+from __future__ import annotations
+
+import math
+from collections import Counter
+from collections.abc import Iterable, Sequence
+from typing import NamedTuple
+
+from lineproof.audit.data import Claim, Slip
+from lineproof.audit.slips.edits import Edit
+from lineproof.audit.slips.kinds import FAMILIES
+
+MOST = 8
+"""So many slips of one line are told."""
+LEAST_LIKELY = 2e-4
+"""Below this share a fit is as good as chance, and is not told."""
+SELECTED = frozenset((
+    "pair", "edition", "factor", "legs", "bar count", "diameter", "tributary", "clear span",
+))  # fmt: skip
+"""Families of edits that are each known from practice: each keeps more than an even part."""
+AGAIN = 0.5
+"""Each further slip of a kind counts so much less than the one before."""
+BESIDE = 0.1
+"""A second cause of the same value is told if it is so likely beside the first."""
+_SAME = 1e-9
+
+
+class Fit(NamedTuple):
+    """An edit that reproduces the claim: its value and half width at the claim, and its share.
+
+    ``where`` says in which line, if not in the claimed one.
+    """
+
+    edit: Edit
+    value: float
+    half: float
+    share: float
+    where: str = ""
+
+
+def shares(edits: Sequence[Edit]) -> dict[str, float]:
+    """Return the share of one edit of each family: the family's share over its different values."""
+    different = Counter(
+        family for family, _, _ in {(edit.family, edit.at, edit.value) for edit in edits}
+    )
+    return {
+        family: FAMILIES[family].share / count ** (0.5 if family in SELECTED else 1.0)
+        for family, count in different.items()
+    }
+
+
+def likely(fit: Fit, claim: Claim) -> float:
+    """Return how likely a fit is beside others: its share, less where it is far-fetched or loose.
+
+    A wide result is met by more claims than a narrow one, so that it says less when it is met.
+    """
+    own = claim.stands_for.half
+    width = own + fit.half
+    off = abs(fit.value - claim.stands_for.middle) / width if width else 0.0
+    narrow = own / width if width else 1.0
+    return fit.share * math.exp(-fit.edit.far - 0.7 * off**2) * math.sqrt(max(narrow, 0.02))
+
+
+def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
+    """Return the slips, the most plausible first.
+
+    A value found by several kinds is told once, with the words of the two likeliest.
+    """
+    ordered = sorted(
+        ((likely(fit, claim), order, fit) for order, fit in enumerate(fits)),
+        key=lambda row: (-row[0], row[1]),
+    )
+    groups: list[Group] = []
+    for share, _, fit in ordered:
+        kind = FAMILIES[fit.edit.family].kind
+        same = next((group for group in groups if _equal(group.value, fit.value)), None)
+        if same is None:
+            groups.append(Group(share, {kind: fit}))
+        elif share >= BESIDE * same.share:
+            same.fits.setdefault(kind, fit)
+    return tuple(
+        _slip(group, claim) for group in _varied(groups)[:MOST] if group.share >= LEAST_LIKELY
+    )
+
+
+def _slip(group: Group, claim: Claim) -> Slip:
+    kind, *others = group.fits
+    return Slip(kind, _sentence(group, claim), group.value, group.share, tuple(others))
+
+
+class Group(NamedTuple):
+    """Fits of one value, one of each kind, the likeliest first, with the share of that one."""
+
+    share: float
+    fits: dict[str, Fit]
+
+    @property
+    def value(self) -> float:
+        """The value at the claim."""
+        return next(iter(self.fits.values())).value
+
+
+def _varied(groups: list[Group]) -> list[Group]:
+    """Order slips so that many of one kind, nearly alike, do not push out the other kinds."""
+    met: Counter[str] = Counter()
+    weighed = []
+    for group in groups:
+        kind = next(iter(group.fits))
+        weighed.append(group._replace(share=group.share * AGAIN ** met[kind]))
+        met[kind] += 1
+    return sorted(weighed, key=lambda group: -group.share)
+
+
+def _equal(first: float, second: float) -> bool:
+    return abs(first - second) <= _SAME * max(abs(first), abs(second))
+
+
+def _sentence(group: Group, claim: Claim) -> str:
+    """Say what gives the claimed value, and the other cause of the same value that is likeliest."""
+    fit, *others = group.fits.values()
+    how = "exactly" if claim.stands_for.holds(fit.value) else "within the digits of its arguments"
+    said = f"Reproduced {how} with {fit.edit.words()}{fit.where}."
+    if others:
+        said += f" The same value comes with {others[0].edit.words()}{others[0].where}."
+    return said

@@ -1,0 +1,1 @@
+"""A printed package against the record inside it."""
