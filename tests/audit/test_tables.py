@@ -191,6 +191,19 @@ def test_too_many_rows_of_a_workbook(tmp_path: Path, monkeypatch: pytest.MonkeyP
     assert "more than 29 rows" in faults(path)[0]
 
 
+def test_values_far_below_the_table_are_not_passed_over(tmp_path: Path) -> None:
+    """In row 30 000 after a gap; a row there that only has a height is nothing."""
+    path = workbook(tmp_path, [["id", "claimed"], ["x", 1]])
+    book = load_workbook(path)
+    sheet = book.worksheets[0]
+    sheet.row_dimensions[30_000].height = 20
+    book.save(path)
+    assert len(read_table(path).rows) == 1
+    sheet["A30000"] = "y"
+    book.save(path)
+    assert "rows below 20000 hold values, which are not read" in faults(path)[0]
+
+
 def test_a_zip_that_is_no_workbook(tmp_path: Path) -> None:
     path = tmp_path / "claims.xlsx"
     with zipfile.ZipFile(path, "w") as archive:

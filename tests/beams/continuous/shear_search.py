@@ -7,8 +7,24 @@ from itertools import product
 
 import numpy as np
 
-from lineproof.beams.continuous.shear_choice import Fitting
+from lineproof.beams.continuous.shear_choice import Fitting, choose_layouts
+from lineproof.beams.continuous.shear_state import SpanState
 from lineproof.beams.continuous.stirrups import SpanLayout, grid, lay
+from lineproof.errors import UserError
+
+
+def assert_lightest(states: list[SpanState]) -> None:
+    """Find no lighter choice than the one made; where none is made, none holds."""
+    fits = [Fitting.of(state) for state in states]
+    try:
+        layouts = choose_layouts(states)
+    except UserError:
+        hopeless = any(state.hopeless.max() > 1 for state in states)
+        assert hopeless or lightest(fits)[0] == math.inf
+        return
+    mass = sum(x.number * fit.weight for x, fit in zip(layouts, fits, strict=True))
+    assert all(stands(fit, x) for fit, x in zip(fits, layouts, strict=True))
+    assert (round(mass, 3), sum(x.zones for x in layouts)) == lightest(fits)
 
 
 def lightest(fits: list[Fitting]) -> tuple[float, int]:

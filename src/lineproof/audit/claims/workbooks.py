@@ -25,6 +25,8 @@ _COLUMNS_READ = 64
 _ROWS_READ = 20_002
 _OLD_FORMAT = b"\xd0\xcf\x11\xe0"
 _MERGED = re.compile(rb"<(?:\w+:)?mergeCell\s[^>]{0,80}?ref=[\"']([A-Z0-9:$]{1,30})[\"']")
+_ROW = re.compile(rb"<(?:\w{1,20}:)?row\s[^>]{0,400}?\br=[\"'](\d{1,9})[\"']")
+_VALUES = (b"<v>", b"<is>", b":v>", b":is>")
 _SHEET = re.compile(r"xl/worksheets/[^/]+\.xml", re.IGNORECASE)
 _DECIMALS = re.compile(r"(?:#,##)?0(?:\.(0+))?\Z")
 _POWERS = re.compile(r"0(?:\.(0+))?E\+0+\Z")
@@ -66,7 +68,7 @@ def _archive_faults(content: bytes, name: str) -> list[str]:
             members = archive.infolist()
             return _size_faults(members, name) or _content_faults(archive, members, name)
     except (
-        zipfile.BadZipFile, zlib.error, NotImplementedError, RuntimeError, OSError, EOFError,
+        zipfile.BadZipFile, zlib.error, RuntimeError, OSError, EOFError,
     ):  # fmt: skip
         return [f"{name}: not a workbook, or cut off; save the table as .xlsx again"]
 
@@ -105,7 +107,17 @@ def _content_faults(
                 f"{name}: cells {found.decode()} are merged; split them, one value in each cell"
                 for found in _MERGED.findall(text)[:10]
             ]
+            if _filled_below(text):
+                faults.append(
+                    f"{name}: rows below {_ROWS_READ - 2} hold values, which are not read"
+                )
     return faults
+
+
+def _filled_below(sheet: bytes) -> bool:
+    """Tell whether rows that are not read hold values; empty ones may only carry a format."""
+    below = next((row for row in _ROW.finditer(sheet) if int(row[1]) > _ROWS_READ), None)
+    return below is not None and any(mark in sheet[below.end() :] for mark in _VALUES)
 
 
 def _declares(text: bytes) -> bool:
