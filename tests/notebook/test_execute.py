@@ -3,15 +3,17 @@ from __future__ import annotations
 import json
 import os
 import signal
+import subprocess
 import sys
 import threading
 from pathlib import Path
+from types import SimpleNamespace
 from typing import Any
 
 import pytest
 
 from lineproof.errors import UserError
-from lineproof.notebook.execute import execute
+from lineproof.notebook.execute import _end, execute
 
 Notebook = dict[str, Any]
 
@@ -113,6 +115,16 @@ def test_what_is_printed_is_joined_in_one_pass(unrun: Notebook, tmp_path: Path) 
     first, second = run(with_code(unrun, code), tmp_path)["cells"][-1]["outputs"]
     assert "".join(first["text"]) == "3 %\nend\n" + "x" * 3_000_000 + "\n"
     assert (second["name"], second["text"]) == ("stderr", ["e\n"])
+
+
+def test_a_kernel_that_outlives_its_client_is_ended() -> None:
+    """As after a signal that comes between two steps of the client."""
+    with subprocess.Popen([sys.executable, "-c", "while True: pass"]) as process:
+        assert process.poll() is None
+        _end(SimpleNamespace(provisioner=SimpleNamespace(process=process)))
+        assert process.poll() is not None
+    _end(SimpleNamespace(provisioner=None))
+    _end(None)
 
 
 def test_a_cell_that_never_ends_is_stopped_by_the_keyboard(unrun: Notebook, tmp_path: Path) -> None:

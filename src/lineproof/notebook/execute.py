@@ -76,6 +76,16 @@ def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progre
             if getattr(client, "_async_cleanup_kernel_future", None) is None:
                 raise
             raise KeyboardInterrupt from None
+        finally:
+            _end(client.km)
+
+
+def _end(manager: Any) -> None:
+    """End a kernel that outlived its client: a signal may come between two steps of that."""
+    process = getattr(getattr(manager, "provisioner", None), "process", None)
+    if process is not None and process.poll() is None:
+        process.kill()
+        process.wait()
 
 
 def _kernel_manager(scratch: Path) -> Any:
