@@ -275,6 +275,19 @@ def test_a_file_without_end_is_not_read_to_its_end(
     path = tmp_path / f"endless.{kind}"
     path.symlink_to("/dev/zero")
     assert main(["lines", str(path)]) == 2
+    assert capsys.readouterr().err == (
+        f"{path}: cannot be read (a pipe or a device; give a saved file)\n"
+    )
+
+
+@pytest.mark.parametrize("kind", ["json", "html", "pdf", "ipynb"])
+def test_a_file_larger_than_any_package_is_not_read(
+    kind: str, tmp_path: Path, capsys: Capture
+) -> None:
+    path = tmp_path / f"large.{kind}"
+    with path.open("wb") as stream:
+        stream.truncate(64_000_001)
+    assert main(["lines", str(path)]) == 2
     assert capsys.readouterr().err == f"{path}: larger than 64 MB; not read\n"
 
 

@@ -6,6 +6,7 @@ recorded check holds; it shares with the choice neither its shortcuts nor its nu
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 from itertools import product
 from typing import Any
@@ -28,6 +29,8 @@ from .flow import analysed
 SIZES = {"15M": 200, "20M": 300, "25M": 500, "30M": 700, "35M": 1000}
 """Areas of the bars tried [mm2] (CSA G30.18)."""
 MOST = 7
+MOST_TOP = 9
+"""Bars tried in a layer at the bottom, in the web at the top."""
 
 
 def _holds(beam: beams.ContinuousBeam, record: Any, *keys: str) -> bool:
@@ -99,7 +102,7 @@ def _random_beams(draw: st.DrawFn, least: int = 1, most: int = 2) -> dict[str, A
     }
 
 
-@settings(max_examples=25, deadline=None)
+@settings(max_examples=25, deadline=None, derandomize=True, database=None)
 @given(_random_beams())
 def test_no_bottom_bars_are_better(changes: dict[str, Any]) -> None:
     beam = analysed(**changes)
@@ -118,7 +121,7 @@ def _best_top(beam: beams.ContinuousBeam, support: int) -> dict[str, float]:
     keys = [f.key for f in faces_of(model) if f.support == support and hogging(model, f) > 0]
     found: dict[str, float] = {}
     for size, area in SIZES.items():
-        for n, beside in product(range(2, MOST + 1), range(6)):
+        for n, beside in product(range(2, MOST_TOP + 1), range(MOST_TOP)):
             top = TopBars(BarLayer(n, size), beside, 2)
             total = area * (n + 2 * beside)
             if total < found.get(size, float("inf")) and _holds(
@@ -142,22 +145,30 @@ def _tops_are_best(beam: beams.ContinuousBeam) -> None:
         for size in SIZES
         if all(size in made for made in best.values())
     ]
-    if not totals:
-        with pytest.raises(UserError, match="top_bars"):
-            flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
+    try:
+        chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
+    except UserError:  # refused: then none may hold
+        chosen = {}
+    if not chosen:
+        assert totals == []
         return
-    chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
     tops = {j: made.bars for j, made in chosen.items() if isinstance(made.bars, TopBars)}
     assert set(tops) == set(best)
-    assert sum(bars.area * beside[j] for j, bars in tops.items()) == pytest.approx(min(totals))
     assert len({bars.web.size for bars in tops.values()}) == 1
+    for support, bars in tops.items():
+        keys = [f.key for f in faces_of(model) if f.support == support and hogging(model, f) > 0]
+        assert _holds(
+            beam, lambda m, j=support, t=bars: flexure.record_hog(m, j, t, beam.pair), *keys
+        )
+    mass = sum(bars.area * beside[j] for j, bars in tops.items())
+    assert mass <= min(totals, default=math.inf) * (1 + 1e-9)
 
 
 def test_no_top_bars_are_better() -> None:
     _tops_are_best(analysed())
 
 
-@settings(max_examples=25, deadline=None)
+@settings(max_examples=25, deadline=None, derandomize=True, database=None)
 @given(_random_beams(2, 3))
 def test_no_top_bars_of_random_beams_are_better(changes: dict[str, Any]) -> None:
     _tops_are_best(analysed(**changes))
