@@ -138,7 +138,7 @@ class Saved(HTMLParser):
     @staticmethod
     def _tag(tag: str, attrs: list[tuple[str, str | None]]) -> str:
         told = [
-            f'{name}="file:///home/x/beam.html{value}"'
+            f'{name}="file:///saved/beam.html{value}"'
             if name == "href" and (value or "").startswith("#")
             else f'{name}="{(value or "").replace("&", "&amp;").replace(chr(34), "&quot;")}"'
             for name, value in attrs

@@ -146,7 +146,7 @@ def _exact_roots(
     equation = expression(formula.tree).subs(at) - sympy.Rational(result)
     try:
         roots = sympy.solve(equation, symbol(name))
-    except NotImplementedError:
+    except RuntimeError:  # so sympy says that it knows no way
         return []
     numbers = [complex(root.evalf(30)) for root in roots if not root.free_symbols]
     return [number.real for number in numbers if abs(number.imag) < 1e-12 * (1 + abs(number.real))]
