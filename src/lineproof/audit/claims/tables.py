@@ -17,7 +17,7 @@ from pathlib import Path
 from lineproof.audit.claims.workbooks import read_workbook, workbook_bytes
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo
-from lineproof.resources import open_file
+from lineproof.resources import csv_text, open_file
 
 MOST_BYTES = 20_000_000
 MOST_ROWS = 20_000
@@ -124,15 +124,7 @@ def _text(content: bytes, name: str) -> str:
         raise UserError(f"{name}: UTF-16 text; save it as 'CSV UTF-8'")
     if content.startswith(b"PK"):
         raise UserError(f"{name}: a workbook with the ending .csv; rename it to .xlsx")
-    try:
-        text = content.decode("utf-8-sig")
-    except UnicodeDecodeError as error:
-        raise UserError(
-            f"{name}: not UTF-8 at byte {error.start}; save it as 'CSV UTF-8'"
-        ) from None
-    if "\0" in text:
-        raise UserError(f"{name}: holds zero bytes; it is no text, save it as 'CSV UTF-8'")
-    return text
+    return csv_text(content, name)
 
 
 def _delimiter(text: str) -> str:

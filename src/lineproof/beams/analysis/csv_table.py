@@ -15,6 +15,7 @@ from typing import Literal
 
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo, internal_factor, unit_named
+from lineproof.resources import csv_text
 
 Cell = str | float
 Kind = Literal["text", "number", "count"]
@@ -102,15 +103,7 @@ def _text(source: Path | bytes, name: str) -> str:
             source = stream.read(MOST_BYTES + 1)
     if len(source) > MOST_BYTES:
         raise UserError(f"{name}: larger than {MOST_BYTES // 1_000_000} MB; export fewer cases")
-    try:
-        text = source.decode("utf-8-sig")
-    except UnicodeDecodeError as error:
-        raise UserError(
-            f"{name}: not UTF-8 at byte {error.start}; save it as 'CSV UTF-8'"
-        ) from None
-    if "\0" in text:
-        raise UserError(f"{name}: holds zero bytes; it is no text, save it as 'CSV UTF-8'")
-    return text
+    return csv_text(source, name)
 
 
 def _rows(text: str, name: str) -> Iterator[tuple[int, list[str]]]:
