@@ -7,7 +7,7 @@ import math
 import re
 from collections.abc import Iterable, Mapping
 from operator import itemgetter
-from typing import Any
+from typing import Any, NoReturn
 
 from lineproof.errors import UserError
 
@@ -83,7 +83,12 @@ def _check(value: object, depth: int) -> None:
         if isinstance(item, dict | list):
             _check(item, depth + 1)
         elif not _is_plain(item):
-            raise UserError(f"record: {shown(item)} is neither text nor a finite number")
+            refuse_value(item)
+
+
+def refuse_value(value: object) -> NoReturn:
+    """Raise :class:`UserError` about a value that may not stand in a record."""
+    raise UserError(f"record: {shown(value)} is neither text nor a finite number")
 
 
 def _is_plain(value: object) -> bool:

@@ -2,13 +2,13 @@
 
 from __future__ import annotations
 
-import json
 from functools import cached_property
 from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.record.build import SCHEMA
-from lineproof.record.plain_data import json_text
+from lineproof.record.plain_data import check_plain, json_text
+from lineproof.record.plain_text import read_plain
 from lineproof.record.uncollected import uncollected
 from lineproof.record.validate import check_record
 
@@ -33,15 +33,16 @@ class Record:
         if len(text) > LARGEST_RECORD:
             raise UserError(f"record: larger than {LARGEST_RECORD // 1_000_000} MB; not read")
         with uncollected():
-            try:
-                data = json.loads(text, parse_constant=_refuse_constant)
-            except (ValueError, RecursionError) as error:
-                raise UserError(f"record: not readable as JSON ({str(error)[:80]})") from None
-            return cls.from_data(data)
+            return cls._of_plain(read_plain(text))
 
     @classmethod
     def from_data(cls, data: object) -> Record:
         """Check plain data and wrap it; raises :class:`UserError`."""
+        check_plain(data)
+        return cls._of_plain(data)
+
+    @classmethod
+    def _of_plain(cls, data: object) -> Record:
         schema = data.get("schema") if isinstance(data, dict) else None
         if not isinstance(data, dict) or type(schema) is not int or schema != SCHEMA:
             raise UserError(f"record: not a lineproof record of schema {SCHEMA}")
@@ -84,8 +85,3 @@ class Record:
 
     def _repr_mimebundle_(self, **_: object) -> dict[str, Any]:
         return {MIME: self.data, "text/plain": repr(self)}
-
-
-def _refuse_constant(name: str) -> float:
-    msg = f"{name} is not a number"
-    raise ValueError(msg)

@@ -27,7 +27,6 @@ from lineproof.record.entry import (
 from lineproof.record.plain_data import (
     Fields,
     are_number_texts,
-    check_plain,
     check_texts,
     is_number,
     is_number_text,
@@ -54,8 +53,7 @@ _SYSTEMS = get_args(System)
 
 
 def check_record(data: Data) -> None:
-    """Raise :class:`UserError` with everything that is wrong with the form of a record."""
-    check_plain(data)
+    """Raise :class:`UserError` with everything that is wrong with the form of plain data."""
     need(
         data, "record", calc=dict, kind_of_member=str, project=dict, codes=dict, notation=list,
         parts=list, confirm=list, status=dict, digest=str, seal=str,
