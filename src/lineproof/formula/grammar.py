@@ -99,7 +99,7 @@ def _call(name: str, args: list[ast.expr], text: str, depth: int) -> Call:
 
 
 def _number(node: ast.Constant, text: str) -> str:
-    written = ast.get_source_segment(text.strip(), node) or ""
+    written = text.strip()[node.col_offset : node.end_col_offset]  # one line of ASCII
     if type(node.value) not in (int, float) or not _NUMBER.match(written):
         raise _refuse(text, f"{written[:20]!r} is not a plain number")
     return written

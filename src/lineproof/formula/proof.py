@@ -10,6 +10,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Mapping
+from functools import cache
 from typing import Any
 
 from lineproof.errors import UserError
@@ -57,6 +58,7 @@ def prove_criterion(criterion: Criterion, units: Mapping[str, str]) -> None:
             _same(criterion.text, push.unit_of(side), wanted, criterion.unit or "a number")
 
 
+@cache
 def _internal(spelling: str) -> PintUnit:
     return registry().Unit(UNITS[UNITS[spelling].internal].expression)
 
@@ -66,6 +68,8 @@ def _show(unit: PintUnit) -> str:
 
 
 def _same(text: str, found: PintUnit, wanted: PintUnit, what: str) -> None:
+    if found is wanted:  # as most terms of a long sum are, and pint takes its time to compare
+        return
     ureg = registry()
     if found.dimensionality != wanted.dimensionality:
         raise UnitProofError(f"formula {text!r}: gives {_show(found)}, which is not {what}")
@@ -84,7 +88,7 @@ class _Push:
 
     def __init__(self, text: str, units: Mapping[str, str], numbers: Mapping[str, str]) -> None:
         self.text, self.units, self.numbers = text, units, numbers
-        self.one = registry().Unit("dimensionless")
+        self.one = _internal("")
 
     def unit_of(self, tree: Tree) -> PintUnit:
         match tree:
@@ -104,7 +108,7 @@ class _Push:
             return self.unit_of(left) ** self._exponent(right)
         first, second = self.unit_of(left), self.unit_of(right)
         if op == "*":
-            return first * second
+            return second if first is self.one else first * second
         if op == "/":
             return first / second
         # A bare 0 has any unit.
