@@ -11,9 +11,12 @@ import nbconvert.exporters
 import nbformat
 import pytest
 
+from lineproof.audit.data import Severity
+from lineproof.audit.review.data import Raised, Review, Reviewer
 from lineproof.errors import UserError
 from lineproof.notebook import exporters
 from lineproof.package import records_in_html, records_in_pdf
+from lineproof.package.read import reviews_in_html
 
 Notebook = dict[str, Any]
 
@@ -101,6 +104,38 @@ def test_nbconvert_fails_with_what_to_do(unrun: Notebook, tmp_path: Path) -> Non
     assert done.returncode == 1
     assert "beam: has not been run; run all cells, then save" in done.stderr
     assert not (tmp_path / "beam.html").exists()
+
+
+def _with_review(beam_file: Path, calc: str) -> str:
+    """Lay a review with one finding beside the notebook, as the review page saves it."""
+    at = "2026-12-01T15:05:33Z"
+    found = Raised(1, Severity.MINOR, "Say which bars.", "Kei Mori", at, ("data/A_s",))
+    review = Review(calc, reviewers=(Reviewer("Kei Mori", "KM"),), findings=(found,))
+    text = review.to_text()
+    beam_file.with_name("beam.review.json").write_text(text, encoding="utf-8")
+    return text
+
+
+def test_the_review_beside_the_notebook_is_printed(beam_file: Path) -> None:
+    text = _with_review(beam_file, "B1")
+    printed, _ = CalcPackageHtml().from_filename(str(beam_file))
+    assert "Say which bars." in printed
+    assert [json.loads(found) for found in reviews_in_html(printed)] == [json.loads(text)]
+
+
+def test_a_notebook_that_comes_from_no_file_has_no_review(
+    beam: Notebook, beam_file: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    _with_review(beam_file, "B1")
+    monkeypatch.chdir(beam_file.parent)
+    printed, _ = CalcPackageHtml().from_notebook_node(node(beam), {"metadata": {"name": "beam"}})
+    assert reviews_in_html(printed) == []
+
+
+def test_the_review_of_another_calc_is_refused(beam_file: Path) -> None:
+    _with_review(beam_file, "B9")
+    with pytest.raises(UserError, match="the review is of calc 'B9', not of 'B1'; move it away"):
+        CalcPackagePdf().from_filename(str(beam_file))
 
 
 def test_a_template_in_the_working_folder_changes_nothing(

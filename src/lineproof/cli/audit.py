@@ -18,10 +18,10 @@ from lineproof.audit.search.drawing import drawing_blank
 from lineproof.audit.search.drawing_rows import HEADINGS
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.cli.files import write_all
-from lineproof.cli.review import read_file, refuse_originators
 from lineproof.errors import FaultList, UserError
 from lineproof.notebook.audited import audited, picked
 from lineproof.notebook.records import read_records
+from lineproof.notebook.reviews import read_review_file, refuse_originators
 from lineproof.record import Record
 from lineproof.typeset import printable
 
@@ -96,7 +96,7 @@ def _reviewed(audit: Audit, record: Record, options: argparse.Namespace) -> Revi
     name = " ".join(options.checker.split())
     if not name:
         raise UserError("--review: findings are raised by a person; give --checker NAME")
-    old = read_file(path) if path.exists() else Review(record.calc_id)
+    old = read_review_file(path) if path.exists() else Review(record.calc_id)
     if old.calc != record.calc_id:
         raise UserError(f"{path}: is of calc {old.calc[:40]!r}, not of {record.calc_id!r}")
     initials = "".join(word[0] for word in name.split())

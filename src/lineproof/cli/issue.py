@@ -12,8 +12,8 @@ from pathlib import Path
 from lineproof.cli.files import write_all
 from lineproof.cli.progress import Progress
 from lineproof.cli.rerun import Rerun, failed_checks, load_all, report_changes, rerun_all
-from lineproof.cli.review import review_beside
 from lineproof.errors import FaultList, UserError
+from lineproof.notebook.reviews import printed_beside
 from lineproof.package.facts import PAPERS
 from lineproof.package.reviewed import PrintedReview
 
@@ -120,18 +120,10 @@ def _reviews(reruns: Sequence[Rerun]) -> list[PrintedReview | None]:
     faults = FaultList()
     made: list[PrintedReview | None] = []
     for rerun in reruns:
-        record = rerun.calc.record
         try:
-            review = review_beside(rerun.path, record)
+            made.append(printed_beside(rerun.path, rerun.calc.record))
         except UserError as error:
             faults.take(error)
-            continue
-        if review is None:
-            made.append(None)
-            continue
-        from lineproof.audit.review.print import printed_review  # noqa: PLC0415 - seldom needed
-
-        made.append(printed_review(review, record))
     faults.raise_if_any()
     return made
 

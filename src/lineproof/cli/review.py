@@ -13,10 +13,9 @@ from typing import TYPE_CHECKING
 from lineproof.cli.files import write_all
 from lineproof.cli.lines import MOST_NAMED
 from lineproof.errors import FaultList, UserError
-from lineproof.notebook.records import LARGEST_FILE, read_records
-from lineproof.package.reviewed import REVIEW_SUFFIX
+from lineproof.notebook.records import read_records
+from lineproof.notebook.reviews import beside, read_review_file, refuse_originators
 from lineproof.record import Record
-from lineproof.resources import open_file
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
@@ -48,29 +47,6 @@ def run(options: argparse.Namespace) -> int:
     return 1 if stands.open_items or made.conflicts else 0
 
 
-def beside(calc: Path) -> Path:
-    """Return where the review of a calc lies: beside it, under its name."""
-    return calc.with_name(f"{calc.stem}{REVIEW_SUFFIX}")
-
-
-def review_beside(calc: Path, record: Record) -> Review | None:
-    """Return the review that lies beside a notebook, None for none; raises :class:`UserError`.
-
-    It is refused where it is of another calc, or where the checker is the originator.
-    """
-    path = beside(calc)
-    if not path.is_file():
-        return None
-    review = read_file(path)
-    if review.calc != record.calc_id:
-        raise UserError(
-            f"{path}: the review is of calc {review.calc[:40]!r}, not of {record.calc_id!r}; move "
-            "it away, or put the right one there"
-        )
-    refuse_originators(review, record)
-    return review
-
-
 def _check_places(options: argparse.Namespace, files: Sequence[Path]) -> None:
     """Refuse, before anything is read, what could lose marks at the end."""
     faults = FaultList()
@@ -91,7 +67,7 @@ def _merged(files: Sequence[Path]) -> Merged:
     faults, reviews = FaultList(), []
     for path in files:
         try:
-            reviews.append(read_file(path))
+            reviews.append(read_review_file(path))
         except UserError as error:
             faults.take(error)
     faults.raise_if_any()
@@ -104,46 +80,12 @@ def _merged(files: Sequence[Path]) -> Merged:
     return reduce(join, reviews[1:], Merged(first, conflicts(first)))
 
 
-def read_file(path: Path) -> Review:
-    """Read a review from its file; raises :class:`UserError` that names the file."""
-    from lineproof.audit.review.read import read_review  # noqa: PLC0415 - as in run
-
-    try:
-        with open_file(path) as stream:
-            content = stream.read(LARGEST_FILE + 1)
-        text = content.decode("utf-8-sig")
-    except FileNotFoundError:
-        raise UserError(
-            f"{path}: no such file; open the HTML package in a browser, choose Review, mark lines, "
-            "and save the file there, or name it with --marks FILE"
-        ) from None
-    except OSError as error:
-        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
-    except UnicodeDecodeError:
-        raise UserError(
-            f"{path}: not UTF-8 text; give the file that the review page saved"
-        ) from None
-    try:
-        return read_review(text)
-    except UserError as error:
-        raise UserError([f"{path}: {fault}" for fault in error.faults]) from None
-
-
 def _record_of(review: Review, records: Sequence[Record], path: Path) -> Record:
     for record in records:
         if record.calc_id == review.calc:
             return record
     held = ", ".join(record.calc_id for record in records)
     raise UserError(f"{path}: holds {held}, but the review is of calc {review.calc[:40]!r}")
-
-
-def refuse_originators(review: Review, record: Record) -> None:
-    """Refuse a review by who made the calculation; raises :class:`UserError`."""
-    from lineproof.audit.review.marks import refused_reviewers  # noqa: PLC0415 - as in run
-
-    faults = refused_reviewers(review, record)
-    if faults:
-        raise UserError(faults)
 
 
 def _today() -> str:

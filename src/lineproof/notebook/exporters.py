@@ -7,6 +7,7 @@ template of nbconvert is used: the package has its own, in its own folder.
 from __future__ import annotations
 
 from collections.abc import Mapping
+from pathlib import Path
 from typing import Any, ClassVar
 
 from nbconvert.exporters import Exporter
@@ -34,9 +35,11 @@ class _CalcPackage(Exporter):
     ) -> tuple[Any, Resources]:
         """Return the printed package and the resources with its file extension."""
         notebook, made = super().from_notebook_node(nb, resources, **kw)
-        name = str(made.get("metadata", {}).get("name") or "notebook")
+        about = made.get("metadata", {})
+        name = str(about.get("name") or "notebook")
+        path = Path(about["path"], f"{name}.ipynb") if "path" in about else None
         try:
-            printed = _printed(notebook, name, self.printer)
+            printed = _printed(notebook, name, path, self.printer)
         except UserError as error:
             raise NotPrintableError(error.faults) from None
         made["output_extension"] = self.file_extension
@@ -63,10 +66,16 @@ class CalcPackageHtml(_CalcPackage):
     printer = "to_html"
 
 
-def _printed(notebook: Mapping[str, Any], name: str, printer: str) -> str | bytes:
+def _printed(
+    notebook: Mapping[str, Any], name: str, path: Path | None, printer: str
+) -> str | bytes:
+    """Print a notebook with the review that lies beside its file, where it has one."""
     from lineproof import package  # noqa: PLC0415 - imported to print, not to list
     from lineproof.notebook.read import calc_of  # noqa: PLC0415 - as above
+    from lineproof.notebook.reviews import printed_beside  # noqa: PLC0415 - as above
 
     calc = calc_of(notebook, name)
-    made: str | bytes = getattr(package, printer)(package.build_package([calc.record], [calc.walk]))
+    review = None if path is None else printed_beside(path, calc.record)
+    built = package.build_package([calc.record], [calc.walk], reviews=[review])
+    made: str | bytes = getattr(package, printer)(built)
     return made
