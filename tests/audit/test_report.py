@@ -154,3 +154,11 @@ def test_the_printed_report_can_be_verified_and_holds_user_text_as_text(audit: A
     assert verify(files["a.pdf"], "a.pdf").outcome is Outcome.INTACT
     assert verify(files["a.html"], "a.html").outcome is Outcome.INTACT
     assert "Audit report of a structural calculation" in files["a.html"].decode()
+
+
+def test_the_page_of_a_report_offers_no_review_of_lines_that_it_has_not(audit: Audit) -> None:
+    page = report_files(audit, beam(), "a")["a.html"].decode()
+
+    assert "script-src 'none'" in page
+    assert 'class="rv-open"' not in page
+    assert 'type="module"' not in page

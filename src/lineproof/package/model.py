@@ -32,6 +32,7 @@ from lineproof.package.summary import (
     summary_rows,
 )
 from lineproof.package.words import Words, words_of
+from lineproof.record.entry import CRITERIA, VALUES
 from lineproof.record.plain_data import json_text
 from lineproof.typeset.glyphs import has_missing, tree_has_missing
 from lineproof.typeset.nodes import EQUALS, Math, row
@@ -67,6 +68,12 @@ class Package:
         parts = sum(isinstance(b, PartBlock) for calc in self.calcs for b in calc.blocks)
         tables = sum(printed.kind == "table" for calc in self.calcs for printed in calc.front)
         return parts + tables + 4 * len(self.calcs) + 5
+
+    @property
+    def has_lines_to_check(self) -> bool:
+        """Tell whether there is a value or a comparison that a reviewer could mark."""
+        parts = (b for calc in self.calcs for b in calc.blocks if isinstance(b, PartBlock))
+        return any(printed.kind in (*VALUES, *CRITERIA) for part in parts for printed in part.rows)
 
     @property
     def scopes(self) -> tuple[ScopeBox, ...]:
