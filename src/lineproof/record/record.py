@@ -33,16 +33,17 @@ class Record:
         if len(text) > LARGEST_RECORD:
             raise UserError(f"record: larger than {LARGEST_RECORD // 1_000_000} MB; not read")
         with uncollected():
-            return cls._of_plain(read_plain(text))
+            return cls.from_plain(read_plain(text))
 
     @classmethod
     def from_data(cls, data: object) -> Record:
         """Check plain data and wrap it; raises :class:`UserError`."""
         check_plain(data)
-        return cls._of_plain(data)
+        return cls.from_plain(data)
 
     @classmethod
-    def _of_plain(cls, data: object) -> Record:
+    def from_plain(cls, data: object) -> Record:
+        """Check data that are known to be plain, as JSON text gives them or as they were built."""
         schema = data.get("schema") if isinstance(data, dict) else None
         if not isinstance(data, dict) or type(schema) is not int or schema != SCHEMA:
             raise UserError(f"record: not a lineproof record of schema {SCHEMA}")

@@ -290,7 +290,7 @@ class Sheet(Finding):
             raise UserError(f"{self.calc['id']}: {fault}" for fault in faults)
         with uncollected():
             # Read as any other record: what could not be read back is refused here.
-            return Record.from_data(self.view(in_order(self._parts)))
+            return Record.from_plain(self.view(in_order(self._parts)))
 
     def view(self, parts: Iterable[Part]) -> dict[str, Any]:
         """Return the record data of some parts, without the checks of :meth:`close`."""
