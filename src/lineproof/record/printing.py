@@ -138,9 +138,9 @@ class Printer:
                 break
         self._pass()
 
-    def _pass(self) -> set[int]:
-        """Print what is due, in order; return the values of which it may ask for other digits."""
-        asked: set[int] = set()
+    def _pass(self) -> dict[int, int]:
+        """Print what is due, in order; return the most digits it newly asks for, by value."""
+        asked: dict[int, int] = {}
         for one in self._prints:
             if not one.due:
                 continue
@@ -149,20 +149,19 @@ class Printer:
             self._print(one)
             one.due = False
             if one.uses != before:
-                asked.update(key for key, _ in one.uses)
+                for key, digits in one.uses:
+                    asked[key] = max(digits, asked.get(key, digits))
             if self.digits.get(own) != shown:
                 for user in self._users.get(own, ()):
                     user.due = user.due or own not in user.ahead
         return asked
 
-    def _tell(self, asked: set[int]) -> bool:
+    def _tell(self, asked: Mapping[int, int]) -> bool:
         """Take over the digits asked for; tell whether any value is to show more than before."""
         more = False
-        for key in asked:
-            uses = [n for user in self._users[key] for used, n in user.uses if used == key]
+        for key, needed in asked.items():
             before = self._wanted.get(key)
-            needed = max(uses) if before is None else max(before, *uses)
-            if needed == before:
+            if before is not None and needed <= before:
                 continue
             self._wanted[key] = needed
             more = True
