@@ -68,8 +68,6 @@ def _show(unit: PintUnit) -> str:
 
 
 def _same(text: str, found: PintUnit, wanted: PintUnit, what: str) -> None:
-    if found is wanted:  # as most terms of a long sum are, and pint takes its time to compare
-        return
     ureg = registry()
     if found.dimensionality != wanted.dimensionality:
         raise UnitProofError(f"formula {text!r}: gives {_show(found)}, which is not {what}")
@@ -111,8 +109,8 @@ class _Push:
             return second if first is self.one else first * second
         if op == "/":
             return first / second
-        # A bare 0 has any unit.
-        if right == Number("0"):
+        # A bare 0 has any unit; most terms of a long sum have the very same.
+        if right == Number("0") or second is first:
             return first
         _same(self.text, second, first, f"{_show(first)}, so the sum has no meaning")
         return first
@@ -141,7 +139,7 @@ class _Push:
                 (u for a, u in zip(args, units, strict=True) if a != Number("0")), self.one
             )
             for arg, unit in zip(args, units, strict=True):
-                if arg != Number("0"):
+                if arg != Number("0") and unit is not first:
                     _same(self.text, unit, first, f"{_show(first)} like the other values")
             return first
         _same(self.text, units[0], _internal("deg"), "an angle")
