@@ -20,6 +20,7 @@ from lineproof.beams.continuous.deflections import (
 )
 from lineproof.beams.continuous.deliverables import SCHEDULE, record_schedule
 from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
+from lineproof.beams.continuous.flexure_gaps import record_hog_without, record_sag_gap
 from lineproof.beams.continuous.geometry import record_spans
 from lineproof.beams.continuous.imported_record import not_covered, record_imported_analysis
 from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
@@ -31,7 +32,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
-from lineproof.beams.continuous.resistance_record import COVERAGE
+from lineproof.beams.continuous.resistance_station import COVERAGE
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
@@ -124,13 +125,25 @@ class ContinuousBeam:
         sizes = [layer.size for chosen in design.bottom.values() for layer in layers_of(chosen)]
         sizes += [top_of(chosen).web.size for chosen in design.top.values()]
         with self.sheet.chapter(FLEXURE_CALL, closing=self._cure):
-            record_cover(self.sheet, self.inputs, sizes)
-            for span, chosen in design.bottom.items():
-                flexure.record_sag(design.model, span, layers_of(chosen), self.pair)
+            record_cover(self.sheet, self.inputs, sizes or [run.size for run in design.runs])
+            for span in flexure.sagging_spans(design.model):
+                self._sag(design, span)
             for support, typed in enumerate(self.inputs.supports, start=1):
                 if typed.kind != "free":
-                    bars = top_of(design.top[support]) if support in design.top else None
-                    flexure.record_hog(design.model, support, bars, self.pair)
+                    self._hog(design, support)
+
+    def _sag(self, design: Design, span: int) -> None:
+        if span in design.bottom:
+            layers = layers_of(design.bottom[span])
+            flexure.record_sag(design.model, span, layers, self.pair)
+            return
+        record_sag_gap(design.model, span, design.beside[span], design.designed.bars.holders)
+
+    def _hog(self, design: Design, support: int) -> None:
+        if support in design.top:
+            flexure.record_hog(design.model, support, top_of(design.top[support]), self.pair)
+        else:
+            record_hog_without(design.model, support, design.designed.bars.holders)
 
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""

@@ -148,17 +148,17 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     if match is None:
         return []
     span = int(match[1])
+    values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
     try:
         section, moments = bent_of(model, span, _behind(model, span))
+        use = cures_checks.deflecting(
+            section, moments, carries=model.inputs.carries, history=history_of(model), **values
+        )
+        now = use({})
     except UserError:
         return []
-    values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
-
-    use = cures_checks.deflecting(
-        section, moments, carries=model.inputs.carries, history=history_of(model), **values
-    )
     recorded = utilisation(check)
-    if recorded is None or abs(use({}) - recorded) > _SAME * recorded:
+    if recorded is None or abs(now - recorded) > _SAME * recorded:
         return []
     variables = {
         "h": find.depth(section.h), "b_w": find.width(section.b_w),

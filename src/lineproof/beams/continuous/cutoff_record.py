@@ -34,6 +34,11 @@ from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
 
+_NONE = (
+    "No bars go on: the bars may end only where no load case brings tension to the {face}, and "
+    "past it."
+)
+
 
 @dataclass(frozen=True, eq=False)
 class Site:
@@ -111,11 +116,17 @@ def _record_point(site: Site, index: int, point: Point) -> None:
     side, sheet = site.side, site.writers.sheet
     ending, continuing = side.cuts[index], side.continuing(index)
     steps = begin(site.writers, sheet, side.span, side.face)
-    record_area(steps, grouped(site.writers, continuing), "A_co")
-    record_resistance(steps, site.writers, side.face)
-    steps.bind(x_t=site.given("x_t", point.t, "found along the envelope; confirmed below"))
+    if continuing:
+        record_area(steps, grouped(site.writers, continuing), "A_co")
+        record_resistance(steps, site.writers, side.face)
+        source = "found along the envelope; confirmed below"
+    else:
+        sheet.note("none-going-on", _NONE.format(face=side.face), title="Bars that go on")
+        source = "found along the envelope"
+    steps.bind(x_t=site.given("x_t", point.t, source))
     site.writers.forces(steps, site.demand(point.t, point.row), side.near, steps.entry("x_t"))
-    steps.check(clause.SUFFICES)
+    if continuing:
+        steps.check(clause.SUFFICES)
     record_extension(site, steps, point.t, ending.t, ending.runs)
     _record_continuing(site, steps, index)
 

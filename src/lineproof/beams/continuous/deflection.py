@@ -24,10 +24,8 @@ from lineproof.standards.a23_3 import flange
 FINAL = "5 years or more"
 ATTACHED = "3 months"
 DAMAGED = "roof or floor with parts attached that deflection damages"
-NO_TOP_BARS = (
-    "midspan: the moment under service load is hogging and cracks the section, and no top bars run "
-    "through it, developed to both sides, so no deflection is computed here; write a deeper beam "
-    "or stronger concrete, so that it stays whole, or give bar_runs with top bars through midspan"
+NO_STIFFNESS = (
+    "a section in which no bars count has no stiffness once it cracks: no deflection is computed"
 )
 LIVE_LIMITS = (
     "flat roof, nothing attached that deflection damages",
@@ -88,6 +86,11 @@ class SpanSection:
     free: FreeEnd = ""
     behind: Behind | None = None
     top: Place | None = None
+
+    @property
+    def places(self) -> tuple[Place | None, ...]:
+        """The sections that bend; one without bars has the area 0."""
+        return self.midspan, self.left, self.right, self.top
 
 
 @dataclass(frozen=True, slots=True)
@@ -192,8 +195,11 @@ def deflections(
 ) -> Deflections:
     """Return all deflections of a span; ``carries`` is a row of Table 9.3.
 
-    Raises :class:`UserError` where a place cracks for which there is no section.
+    Raises :class:`UserError` for sections without bars, and where a place cracks for which there
+    is no section.
     """
+    if any(place is not None and place.A_s <= 0 for place in section.places):
+        raise UserError(NO_STIFFNESS)
     history = history or History()
     divisor = float(clause.LIMITS.row(carries, "carries")["k_D"])
     f_rd = clause.F_R_DEFLECTION.function(section.f_r)
@@ -303,7 +309,7 @@ class _Bent:
         if M < 0:
             I_e = self._hogging("top", stages.HOGGING_SIZE.function(min(M, earlier)))
             if I_e is None:
-                raise UserError(NO_TOP_BARS)
+                raise UserError(NO_STIFFNESS)
             return I_e
         M_a = stages.LARGEST_SO_FAR.function(M, earlier)
         if M_a <= self.M_crd:

@@ -20,7 +20,7 @@ from lineproof.beams.continuous.deflection_service import (
 )
 from lineproof.beams.continuous.deflection_shapes import deflected_shapes
 from lineproof.beams.continuous.deflection_top import top_recorded
-from lineproof.beams.continuous.deflections import history_of, service_of, top_at
+from lineproof.beams.continuous.deflections import bars_in, history_of, service_of, top_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.figure_deflection import (
     DeflectionCurve,
@@ -97,8 +97,8 @@ def _section(model: Model, span: int, behind: Mapping[int, Behind]) -> SpanSecti
     b_w = find("b_w").value
     midspan = None
     if not free:
-        sag = sheet.entries_of(f"sag-{span}")
-        midspan = Place(place.get("b_f", b_w), sag["d"].value, sag["A_s"].value)
+        bars = bars_in(sheet.entries_of(f"sag-{span}"))
+        midspan = _place(place.get("b_f", b_w), bars)
     before = span_behind(model.forces.beam, span) if free else None
     return SpanSection(
         place["l"], place["l_n"], place["h"], b_w,
@@ -114,4 +114,7 @@ def _top(model: Model, b_w: float, support: int, side: str) -> Place | None:
 
 
 def _place(b_w: float, bound: Mapping[str, Entry] | None) -> Place | None:
-    return None if bound is None else Place(b_w, bound["d"].value, bound["A_s"].value)
+    """Return a section; without bars, which no deflection is computed for, where it binds none."""
+    if bound is None:
+        return None
+    return Place(b_w, bound["d"].value, bound["A_s"].value) if bound else Place(b_w, 0.0, 0.0)

@@ -72,7 +72,7 @@ def record_limits(
     rise = _record_rise(steps, lifting, by_live=by_live)
     steps.line(stages.CAMBER)
     sheet.note("camber", _CAMBER, title="Camber", clause="9.8.2.6", basis=FROM_MEMORY)
-    if not cantilever:
+    if not cantilever and all(f"I_cr{place}" in steps.place for place in ("m", *ends)):
         sheet.note("beside", _BESIDE, title="Curvature", basis=COMMON_PRACTICE)
         _record_curvature(steps, ends, local)
     return check, rise

@@ -14,7 +14,6 @@ from typing import Any
 from lineproof.beams.continuous.deflection import (
     DAMAGED,
     LIVE_LIMITS,
-    NO_TOP_BARS,
     History,
     continuity,
     least_depth,
@@ -24,13 +23,13 @@ from lineproof.beams.continuous.deflection_limits import record_limits
 from lineproof.beams.continuous.deflection_local import LocalLoad, Sums, record_local
 from lineproof.beams.continuous.deflection_service import STAGES, FreeEnd, Stage
 from lineproof.beams.steps import Steps, only
-from lineproof.errors import UserError
-from lineproof.formula import Formula
+from lineproof.formula import Criterion, Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 from lineproof.standards.a23_3 import flange
+from lineproof.standards.references import MECHANICS
 
 Moments = Callable[[Steps, Stage], None]
 """Records, inside the open part of a stage, what its moments rest on, and binds them in ``place``.
@@ -41,6 +40,10 @@ behind; hogging moments positive. ``M_aem``, ``M_ae1``, ``M_ae2`` (root: ``M_ae1
 are the largest moments reached before, a construction stage included.
 """
 Bound = Mapping[str, Entry]
+_NO_STIFFNESS = (
+    "Under this moment the concrete cracks where no bars count: nothing bends there but a hinge. "
+    "No deflection is given, and the span does NOT hold; bars that cross the crack are needed."
+)
 WORDS: Mapping[Stage, str] = {
     "dead": "dead load",
     "sustained": "dead load and sustained live load",
@@ -60,7 +63,8 @@ class SpanEntries:
     """One span as recorded: ``span`` binds l, l_n, h, I_g, y_b.
 
     ``midspan`` binds b, d, A_s; ``left`` and ``right`` bind d, A_s at continuous ends and are
-    None elsewhere; each may bind A_sp and d_p, which are counted then. Sections at supports are the
+    None elsewhere; a section without bars binds no A_s. Each may bind A_sp and d_p, which are
+    counted then. Sections at supports are the
     web, top in tension. ``behind`` is the number of the span behind a cantilever, whose deflections
     must be recorded before; None where the root is fixed. ``l_behind`` is its length. ``top`` binds
     d and A_s of the top bars that run through midspan, for spans that hog there.
@@ -107,6 +111,14 @@ class RecordedDeflection:
     entries: Mapping[str, Entry] = field(default_factory=dict)
 
 
+class NoStiffnessError(Exception):
+    """A section in which no bars count cracks: ``test`` fails with the moment and its limit."""
+
+    def __init__(self, test: Criterion, M_a: Entry, limit: Entry) -> None:
+        super().__init__(test.key)
+        self.test, self.M_a, self.limit = test, M_a, limit
+
+
 def record_deflection(
     sheet: Sheet,
     span: SpanEntries,
@@ -136,10 +148,16 @@ def record_deflection(
         sums = record_local(steps, span.local, cantilever=span.free)
         behind = _record_behind(steps, span)
     for stage in (*STAGES, *(("rise",) if lifting else ())):
+        broken = None
         with sheet.part(f"{key}-{stage}", f"Deflection of {span.name}: {WORDS[stage]}"):
             own = Steps(sheet, steps.place)
-            _record_stage(own, span, moments, stage, (sums, behind))
-            steps.bind(**{SYMBOLS[stage]: own.entry(SYMBOLS[stage])})
+            try:
+                _record_stage(own, span, moments, stage, (sums, behind))
+            except NoStiffnessError as found:
+                broken = found
+        if broken is not None:
+            return _record_broken(sheet, span, broken)
+        steps.bind(**{SYMBOLS[stage]: own.entry(SYMBOLS[stage])})
         if stage == "all":
             steps.bind(**only(own.place, ("M_m", "M_h1", "M_h2", "M_h")))
     steps.bind(**_ratio_rests_on(steps, span))
@@ -150,6 +168,14 @@ def record_deflection(
             local=span.local, ends=tuple(span.ends),
         )  # fmt: skip
     return RecordedDeflection(check, rise, sheet.entries_of(key))
+
+
+def _record_broken(sheet: Sheet, span: SpanEntries, found: NoStiffnessError) -> RecordedDeflection:
+    """Record, in place of the limits, the check that fails for want of stiffness."""
+    with sheet.part(f"deflection-{span.number}", f"Deflection of {span.name}: no stiffness"):
+        sheet.note("no-stiffness", _NO_STIFFNESS, title="Deflection", basis=MECHANICS)
+        args: dict[str, Any] = dict(zip(found.test.names, (found.M_a, found.limit), strict=True))
+        return RecordedDeflection(sheet.check(found.test, **args))
 
 
 def is_calculated(sheet: Sheet, span: SpanEntries, carries: str) -> bool:
@@ -186,7 +212,8 @@ def _record_sections(steps: Steps, span: SpanEntries) -> None:
     steps.lines(clause.MODULAR_RATIO, clause.F_R_DEFLECTION)
     if span.midspan is not None:
         steps.line(clause.CRACKING_BOTTOM)
-        _record_cracked(steps, span.midspan, "m", "at midspan")
+        if "A_s" in span.midspan:
+            _record_cracked(steps, span.midspan, "m", "at midspan")
     b_w = steps.entry("b_w")
     if span.ends or span.top is not None:
         steps.line(stages.CRACKING_WEB)
@@ -196,7 +223,8 @@ def _record_sections(steps: Steps, span: SpanEntries) -> None:
         _record_cracked(steps, {"b": b_w, **span.top}, "t", "hogging at midspan")
     for end, bound in span.ends.items():
         where = "at the root" if span.free else f"at the {('left', 'right')[end == '2']} support"
-        _record_cracked(steps, {"b": b_w, **bound}, end, where)
+        if "A_s" in bound:
+            _record_cracked(steps, {"b": b_w, **bound}, end, where)
 
 
 def _record_cracked(steps: Steps, bound: Bound, end: str, where: str) -> None:
@@ -233,11 +261,13 @@ def _record_behind(steps: Steps, span: SpanEntries) -> Sums:
 def _record_stage(
     steps: Steps, span: SpanEntries, moments: Moments, stage: Stage, sums: tuple[Sums, Sums]
 ) -> None:
+    if span.behind is not None:
+        _need_stiffness(steps.sheet, span.behind)
     moments(steps, stage)
     if span.free:
         _record_tip(steps, span, stage, sums)
         return
-    I_em = _at_midspan(steps, span)
+    I_em = _at_midspan(steps)
     M_m = _with_local(steps, "M_m", sums[0], stage)
     l, delta = steps.entry("l"), SYMBOLS[stage]
     ends = {
@@ -257,7 +287,14 @@ def _record_stage(
         named(steps, stages.SIMPLE_SPAN, delta, title, M_m=M_m, I_e=I_em, l=l)
 
 
-def _at_midspan(steps: Steps, span: SpanEntries) -> Entry:
+def _need_stiffness(sheet: Sheet, behind: int) -> None:
+    """Raise what stopped the deflection of the span behind a cantilever, if anything did."""
+    for entry in sheet.entries_of(f"deflection-{behind}").values():
+        if entry.source in (stages.WHOLE, stages.WHOLE_TOP):
+            raise NoStiffnessError(entry.source, *entry.args)
+
+
+def _at_midspan(steps: Steps) -> Entry:
     """Record the effective inertia at midspan, of the web where the moment is hogging there."""
     M_m = steps.entry("M_m")
     if M_m.value >= 0:
@@ -265,9 +302,7 @@ def _at_midspan(steps: Steps, span: SpanEntries) -> Entry:
     before, title = steps.place.get("M_aem"), ""
     if before is not None and before.value < M_m.value:
         M_m, title = before, "Size of the hogging moment of the earlier stage, which is larger"
-    M_at = named(steps, stages.HOGGING_SIZE, "M_at", title, M_s=M_m)
-    if span.top is None and M_at.value > steps.entry("M_crdn").value:
-        raise UserError(f"span {span.number}, {NO_TOP_BARS}")
+    named(steps, stages.HOGGING_SIZE, "M_at", title, M_s=M_m)
     return _inertia(steps, "t", "M_at", "hogging at midspan", gives="I_em")
 
 
@@ -300,7 +335,10 @@ def _with_local(steps: Steps, symbol: str, sums: Sums, stage: Stage) -> Entry:
 def _inertia(
     steps: Steps, end: str, symbol: str, where: str, I_g: Entry | None = None, gives: str = ""
 ) -> Entry:
-    """Record the largest moment so far and the effective inertia of a place."""
+    """Record the largest moment so far and the effective inertia of a place.
+
+    Raises :class:`NoStiffnessError` where it cracks and no bars count.
+    """
     M_a, before = steps.entry(symbol), steps.place.get(f"M_ae{end}")
     if before is not None:
         title = f"{stages.LARGEST_SO_FAR.title}, {where}"
@@ -314,6 +352,8 @@ def _inertia(
         args: dict[str, Any] = {n: bound[n] for n in test.names}
         steps.sheet.decide(test, key=f"{test.key}-{end}", title=f"{test.title}, {where}", **args)
         formula = stages.GROSS
+    elif f"I_cr{end}" not in steps.place:
+        raise NoStiffnessError(stages.WHOLE_TOP if top else stages.WHOLE, M_a, limit)
     else:
         formula = clause.EFFECTIVE_TOP if top else clause.EFFECTIVE
         bound["I_cr"] = steps.entry(f"I_cr{end}")

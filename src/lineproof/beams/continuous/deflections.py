@@ -129,10 +129,8 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
     behind = span_behind(beam, span) if free else None
     midspan = None
     if not free:
-        sag = sheet.entries_of(f"sag-{span}")
-        midspan = {
-            "b": place.get("b_f", sheet.entry(f"{GIVEN}/b_w")), "d": sag["d"], "A_s": sag["A_s"],
-        }  # fmt: skip
+        b = place.get("b_f", sheet.entry(f"{GIVEN}/b_w"))
+        midspan = {"b": b, **bars_in(sheet.entries_of(f"sag-{span}"))}
     return SpanEntries(
         span,
         {name: place[name] for name in _SPAN},
@@ -148,7 +146,10 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
 
 
 def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
-    """Return d and A_s of the top bars at a continuous end; None at a simple or free end."""
+    """Return d and A_s of the top bars at a continuous end; None at a simple or free end.
+
+    Empty where no bars stand.
+    """
     kind = model.inputs.supports[support - 1].kind
     exterior = support in (1, model.spans + 1)
     if kind == "free" or (kind == "simple" and exterior):
@@ -156,8 +157,15 @@ def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
     for each in (side, "left", "right"):
         found = [p for p in model.sheet.parts if p.key == f"hog-{support}-{each}"]
         if found and "A_s" in found[0].entries:
-            return {name: found[0].entries[name] for name in ("d", "A_s")}
+            return bars_in(found[0].entries)
     return None
+
+
+def bars_in(section: Mapping[str, Entry]) -> dict[str, Entry]:
+    """Return d and A_s of a recorded section; empty where no bars stand."""
+    if section["A_s"].value <= 0:
+        return {}
+    return {name: section[name] for name in ("d", "A_s")}
 
 
 def _local(load: SingleLoad, r_Ls: Entry) -> LocalLoad:

@@ -8,7 +8,7 @@ chosen, then the bars are asked whether they still cover every case with these s
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from itertools import count
 from typing import Any
 
@@ -32,7 +32,11 @@ from lineproof.beams.continuous.detailing_data import (
     Strengths,
 )
 from lineproof.beams.continuous.detailing_data import TopBars as LaidTop
-from lineproof.beams.continuous.detailing_given import read_given_runs, section_bars_of
+from lineproof.beams.continuous.detailing_given import (
+    beside_gap,
+    read_given_runs,
+    section_bars_of,
+)
 from lineproof.beams.continuous.flexure import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
@@ -60,6 +64,8 @@ class Design:
     designed: Designed
     runs: tuple[BarRun, ...]
     stirrups: Choice
+    beside: Mapping[int, BarLayers] = field(default_factory=dict)
+    """Of spans whose middle no given bars cross: the nearest of their bottom bars."""
     raised: tuple[str, ...] = ()
     """Bars that torsion, or shear at a girder, asks for beyond what the moments do, in words."""
 
@@ -127,12 +133,13 @@ def _designed(
     )
     flexure.refuse_unfit(bottom, "bottom_bars")
     flexure.refuse_unfit(top, "top_bars")
-    bars = _section_bars(model, bottom, top, asked.holders)
+    beside = _beside(bare, bottom, runs)
+    bars = _section_bars(model, bottom, top, asked.holders, beside)
     designed = replace(bare, bars=bars)
     if before is not None:
         designed = replace(before.designed, bars=bars, torsion={})
     designed, laid, choice = _laid(model, designed, runs)
-    return Design(model, pair, bottom, top, designed, laid, choice)
+    return Design(model, pair, bottom, top, designed, laid, choice, beside)
 
 
 def _laid(
@@ -260,11 +267,27 @@ def _given_sections(
     return bottom, top
 
 
+def _beside(
+    bare: Designed, bottom: Mapping[int, Chosen], runs: tuple[BarRun, ...] | None
+) -> dict[int, BarLayers]:
+    """Return the nearest bottom bars of the spans whose middle no given bars cross."""
+    spans = range(1, len(bare.outline.lengths) + 1) if runs is not None else ()
+    empty = [k for k in spans if k not in bottom and not bare.cantilever(k)]
+    return {k: beside_gap(runs or (), bare.outline, k) for k in empty}
+
+
 def _section_bars(
-    model: Model, bottom: Mapping[int, Chosen], top: Mapping[int, Chosen], size: str
+    model: Model,
+    bottom: Mapping[int, Chosen],
+    top: Mapping[int, Chosen],
+    size: str,
+    beside: Mapping[int, BarLayers],
 ) -> SectionBars:
     holders = (BarLayer(2, size),)
-    bottoms = [layers_of(bottom[k]) if k in bottom else holders for k in range(1, model.spans + 1)]
+    bottoms = [
+        layers_of(bottom[k]) if k in bottom else beside.get(k) or holders
+        for k in range(1, model.spans + 1)
+    ]
     tops = [_laid_top(top_of(top[j])) if j in top else LaidTop() for j in range(1, model.spans + 2)]
     return SectionBars(tuple(bottoms), tuple(tops), size)
 

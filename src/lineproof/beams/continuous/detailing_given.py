@@ -214,19 +214,14 @@ def _check_section(
 def section_bars_of(runs: Iterable[BarRun], outline: BeamOutline, holders: str) -> SectionBars:
     """Return the bars of every section as they stand in given runs.
 
-    Raises :class:`UserError` for sections without bottom bars and layers of two sizes.
+    No layers where none stand: of a span at its middle. Raises :class:`UserError` for layers of
+    two sizes.
     """
     kept, faults = tuple(runs), FaultList()
     bottom = []
     for span in range(1, len(outline.lengths) + 1):
         middle = sum(outline.faces(span)) / 2
-        layers = _web_at(kept, "bottom", middle, f"span {span}", faults)
-        if not layers:
-            faults.add(
-                f"bar runs: no bottom bars stand at the middle of span {span}, {middle:.0f} mm "
-                "from the axis of support 1; write a run of bars that passes there"
-            )
-        bottom.append(layers)
+        bottom.append(_web_at(kept, "bottom", middle, f"span {span}", faults))
     top = []
     for support, built in enumerate(outline.supports, start=1):
         x = top_section(outline, support)
@@ -236,6 +231,19 @@ def section_bars_of(runs: Iterable[BarRun], outline: BeamOutline, holders: str) 
         top.append(TopBars(web, 0 if free else overhang))
     faults.raise_if_any()
     return SectionBars(tuple(bottom), tuple(top), holders)
+
+
+def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int) -> BarLayers:
+    """Return the bottom bars of a span nearest to its middle, where none stand; () for none."""
+    kept = tuple(runs)
+    start, end = outline.faces(span)
+    middle = (start + end) / 2
+    places = [x for x in _places(kept, outline) if start < x < end]
+    for x in sorted(places, key=lambda x: abs(x - middle)):
+        layers = _web_at(kept, "bottom", x, f"span {span}", FaultList())
+        if layers:
+            return layers
+    return ()
 
 
 def _web_at(

@@ -157,6 +157,8 @@ def choose_bottom(
 ) -> dict[int, Chosen]:
     """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`.
 
+    Of bars given along the beam: no item for a span whose middle none of them cross.
+
     ``least`` is the area that shear and torsion ask for, by span; ``anchored`` tells whether bars
     of a size can be anchored in the end supports.
     """
@@ -168,7 +170,7 @@ def choose_bottom(
         layers = given.get(span)
         if layers is not None:
             made[span] = Chosen(f"span {span}", layers, bottom_checks(at, rules, layers, stirrup))
-        else:
+        elif model.inputs.bar_runs is None:  # else none stand here as given: none are chosen
             sections[span] = Section(
                 f"span {span}", (at,), model.lengths[span - 1].value, (least or {}).get(span, 0.0)
             )  # fmt: skip
@@ -193,6 +195,8 @@ def choose_top(
 ) -> dict[int, Chosen]:
     """Return the top bars of every support that has a moment with the top in tension.
 
+    Of bars given along the beam: no item for a support that none of them cross.
+
     ``least`` is the area within the web that torsion asks for, by support.
     """
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
@@ -202,9 +206,11 @@ def choose_top(
         name = f"support {support}"
         top = given.get(support)
         if top is None:
-            sections[support] = Section(
-                name, tuple(numbers), _top_length(model, support), (least or {}).get(support, 0.0)
-            )  # fmt: skip
+            if model.inputs.bar_runs is None:  # else none stand here as given: none are chosen
+                sections[support] = Section(
+                    name, tuple(numbers), _top_length(model, support),
+                    (least or {}).get(support, 0.0),
+                )  # fmt: skip
             continue
         faces = [top_checks(dict(at), rules, top.web, top.overhang, stirrup) for at in numbers]
         made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))
@@ -294,9 +300,9 @@ def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> No
     demand = model.forces.sag(span)
     origin = _origin(inputs, inputs.bottom_bars[span - 1])
     with sheet.part(f"sag-{span}", f"Span {span}: moment in the span"):
-        steps = _steps(model, span, "b_f" if inputs.slab else "b_w")
-        near = _nearer(model, demand)
-        record_forces(steps, model, demand, near, x=_at_face(model, demand, near))
+        steps = begin(model, span, "b_f" if inputs.slab else "b_w")
+        near = nearer(model, demand)
+        record_forces(steps, model, demand, near, x=at_face(model, demand, near))
         bars_inside(sheet, layers, stirrup=inputs.stirrup, origin=origin)
         _take(steps, _LAYERS)
         required(steps, inputs.shape)
@@ -313,7 +319,7 @@ def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> No
         skin_inside(steps, inputs.exposure)
 
 
-def _steps(model: Model, span: int, width: str) -> Steps:
+def begin(model: Model, span: int, width: str) -> Steps:
     """Return steps in a span whose compression zone has the width ``b_f`` or ``b_w``."""
     sheet = model.sheet
     place = span_place(sheet, model.inputs, span)
@@ -331,12 +337,13 @@ def _take(steps: Steps, names: tuple[str, ...]) -> None:
     steps.bind(**{name: made[name] for name in names if name in made})
 
 
-def _nearer(model: Model, demand: Demand) -> End:
+def nearer(model: Model, demand: Demand) -> End:
+    """Return the end of its span that a demand stands nearer to."""
     half = model.lengths[demand.span - 1].value / 2
     return "left" if demand.x <= half * (1 + 1e-9) else "right"
 
 
-def _at_face(model: Model, demand: Demand, near: End) -> Entry | None:
+def at_face(model: Model, demand: Demand, near: End) -> Entry | None:
     """Record the distance of the near face, if the largest moment of the span stands there.
 
     Beside a span that is loaded far more, the shear is nowhere zero between the faces.
@@ -348,7 +355,7 @@ def _at_face(model: Model, demand: Demand, near: End) -> Entry | None:
     return model.sheet.line(analysis.TO_FACE, b_sn=model.sheet.entry(f"{GIVEN}/b_s{support}"))
 
 
-def record_hog(model: Model, support: int, top: TopBars | None, pair: CodePair) -> None:
+def record_hog(model: Model, support: int, top: TopBars, pair: CodePair) -> None:
     """Record both faces of a support: moments, top bars, resistance and all checks.
 
     The second face of one depth has the same section: there the resistance is taken over.
@@ -358,8 +365,8 @@ def record_hog(model: Model, support: int, top: TopBars | None, pair: CodePair) 
     worst: dict[str, Entry] = {}
     for face in faces:
         with model.sheet.part(face.key, f"{face.name.capitalize()}: moment over the support"):
-            if hogging(model, face) <= 0 or top is None:
-                _record_no_moment(model, face)
+            if hogging(model, face) <= 0:
+                record_no_moment(model, face)
             elif worst and _same_section(model, faces[0], face):
                 _record_other_face(model, face, worst, top)
             else:
@@ -371,7 +378,8 @@ def _same_section(model: Model, first: Face, second: Face) -> bool:
     return depths[first.span - 1].value == depths[second.span - 1].value
 
 
-def _record_no_moment(model: Model, face: Face) -> None:
+def record_no_moment(model: Model, face: Face) -> None:
+    """Record inside the open part that no moment brings tension to the top of a face."""
     carrier = model.inputs.supports[face.support - 1].carrier
     rests = nominally_simple(model, face)
     text = (
@@ -383,7 +391,8 @@ def _record_no_moment(model: Model, face: Face) -> None:
     model.sheet.note("no-moment", text, title="Top bars", basis="common practice")
 
 
-def _record_demand(steps: Steps, model: Model, face: Face) -> None:
+def record_demand(steps: Steps, model: Model, face: Face) -> None:
+    """Record inside the open part the design moment of a face."""
     if nominally_simple(model, face):
         record_restraint(steps, model, face.support, face.span)
         return
@@ -396,8 +405,8 @@ def _record_demand(steps: Steps, model: Model, face: Face) -> None:
 def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict[str, Entry]:
     """Record a face in full; return its resistance and bars for the other face."""
     sheet, inputs = model.sheet, model.inputs
-    steps = _steps(model, face.span, "b_w")
-    _record_demand(steps, model, face)
+    steps = begin(model, face.span, "b_w")
+    record_demand(steps, model, face)
     steps.place.pop("h_f", None)
     _record_top_bars(steps, model, face, top)
     required(steps, "rectangular")
@@ -450,8 +459,8 @@ def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> No
 
 def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top: TopBars) -> None:
     """Record the moment of the milder face, its slab and its cracks, for the same bars."""
-    steps = _steps(model, face.span, "b_w")
-    _record_demand(steps, model, face)
+    steps = begin(model, face.span, "b_w")
+    record_demand(steps, model, face)
     steps.bind(**dict(worst))
     steps.check(flexure.STRENGTH)
     if model.inputs.slab:

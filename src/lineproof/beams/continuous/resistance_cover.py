@@ -56,20 +56,35 @@ class Station:
 
 @dataclass(frozen=True, slots=True)
 class Gap:
-    """A stretch along the beam in which the bars of a face do not carry what they must."""
+    """A stretch along the beam in which the bars of a face do not carry what they must.
+
+    ``left`` is the left axis of the span, ``at`` the worst station of the gap.
+    """
 
     face: Face
     span: int
     start: float
     end: float
-    worst: float
+    left: float
+    at: Station
+
+    @property
+    def worst(self) -> float:
+        """The largest ratio in it; infinite where no bars count."""
+        return self.at.ratio
 
     def __str__(self) -> str:
-        """Say where it is."""
+        """Say where it is, and what acts and holds at its worst station."""
         ratio = "no bars count there" if self.worst == np.inf else f"{self.worst:.2f} of what holds"
+        now, held = (self.at.F, self.at.F_r) if self.at.by_tension else (self.at.M_f, self.at.M_r)
+        name, unit = ("F", "kN") if self.at.by_tension else ("M", "kN.m")
+        size = 1e3 if self.at.by_tension else 1e6
         return (
             f"{self.face} bars, span {self.span}: not enough from {self.start:.0f} to "
-            f"{self.end:.0f} mm along the beam ({ratio})"
+            f"{self.end:.0f} mm along the beam ({ratio}), that is from "
+            f"{(self.start - self.left) / 1e3:.2f} to {(self.end - self.left) / 1e3:.2f} m from "
+            f"the left axis of the span; worst at {self.at.local / 1e3:.2f} m: {name}_f = "
+            f"{now / size:.0f} {unit}, {name}_r = {held / size:.0f} {unit}"
         )
 
 
@@ -134,9 +149,10 @@ def covered(designed: Designed, runs: Iterable[BarRun], count: int = COUNT) -> C
             provided = provide(designed, standing, face, demand.x, np.full(len(demand.x), span))
             ratio = ratios(demand.side(face), provided, yield_force(designed))
             worst.append(_station(designed, demand, face, provided, int(ratio.argmax())))
-            gaps += _gaps(demand, face, ratio)
+            gaps += _gaps(designed, demand, face, provided, ratio)
             for found, values in zip(each, _apart(designed, demand, face, provided), strict=True):
-                found.append(_station(designed, demand, face, provided, int(values.argmax())))
+                index = _worst_in(demand.side(face), values, 0, len(values) - 1)
+                found.append(_station(designed, demand, face, provided, index))
     governing = max(worst, key=lambda s: s.ratio)
     return Coverage(governing, tuple(worst), tuple(each[0]), tuple(each[1]), tuple(gaps))
 
@@ -166,7 +182,9 @@ def _station(
     )  # fmt: skip
 
 
-def _gaps(demand: SpanDemand, face: Face, ratio: Floats) -> list[Gap]:
+def _gaps(
+    designed: Designed, demand: SpanDemand, face: Face, provided: Provided, ratio: Floats
+) -> list[Gap]:
     """Return the stretches in which the ratio exceeds 1."""
     bad = np.flatnonzero(ratio > 1 + ROUND_OFF)
     if not len(bad):
@@ -174,9 +192,45 @@ def _gaps(demand: SpanDemand, face: Face, ratio: Floats) -> list[Gap]:
     breaks = np.flatnonzero(np.diff(bad) > 1)
     firsts = [int(bad[0]), *(int(bad[i + 1]) for i in breaks)]
     lasts = [*(int(bad[i]) for i in breaks), int(bad[-1])]
-    return [
-        Gap(
-            face, demand.span, float(demand.x[a]), float(demand.x[b]), float(ratio[a : b + 1].max())
-        )
-        for a, b in zip(firsts, lasts, strict=True)
-    ]
+    left = designed.outline.axes[demand.span - 1]
+    made = []
+    for a, b in zip(firsts, lasts, strict=True):
+        worst = _worst_in(demand.side(face), ratio, a, b)
+        at = _station(designed, demand, face, provided, worst)
+        made.append(Gap(face, demand.span, float(demand.x[a]), float(demand.x[b]), left, at))
+    return made
+
+
+def _worst_in(side: Side, ratio: Floats, a: int, b: int) -> int:
+    """Return the worst station of a stretch: of several without bars, that of the most moment."""
+    part = ratio[a : b + 1]
+    tied = np.flatnonzero(part == part.max()) + a
+    return int(tied[side.M[tied].argmax()])
+
+
+def worst_of(found: Coverage, face: Face, *, tension: bool) -> Station:
+    """Return the station that the moment of a face uses most, or its tension with shear."""
+
+    def ratio(station: Station) -> tuple[float, float]:
+        if tension:
+            return ratio_of(station.F, station.F_r), station.F
+        return ratio_of(station.M_f, station.M_r), station.M_f
+
+    stations = found.by_tension if tension else found.by_moment
+    return max((s for s in stations if s.face == face), key=ratio)
+
+
+def holds_worst(found: Coverage, gap: Gap) -> bool:
+    """Tell whether one of the two worst stations of a face lies in a gap and fails there."""
+    for tension in (False, True):
+        station = worst_of(found, gap.face, tension=tension)
+        used = (station.F, station.F_r) if tension else (station.M_f, station.M_r)
+        inside = station.span == gap.span and gap.start <= station.x <= gap.end
+        if inside and ratio_of(*used) > 1 + ROUND_OFF:
+            return True
+    return False
+
+
+def gap_key(number: int) -> str:
+    """Return the key of the part of a gap, counted from 1 as in ``Coverage.gaps``."""
+    return f"coverage-gap-{number}"

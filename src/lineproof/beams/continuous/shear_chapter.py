@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Iterable, Mapping
 from typing import Any
 
 from lineproof.beams.continuous.bars_counted import record_area
@@ -27,7 +27,6 @@ from lineproof.beams.continuous.interface import (
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
 from lineproof.beams.continuous.resistance import stand
-from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_sections import ShearSection
@@ -37,7 +36,6 @@ from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.continuous.torsion_inputs import corner_bar
 from lineproof.beams.continuous.torsion_record import record_span_torsion
 from lineproof.beams.steps import Steps
-from lineproof.errors import UserError
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -172,7 +170,7 @@ def _depth(design: Design, steps: Steps, section: ShearSection) -> Entry:
         known = part.entries.get("d") if part.key.startswith(("sag-", "hog-")) else None
         if known is not None and abs(known.value - section.d) <= _SAME * section.d:
             return known
-    sizes = {run.size for run in design.runs}
+    sizes = {design.designed.bars.holders, *(run.size for run in design.runs)}
     for size in sorted(sizes):
         d_b = BARS.number(size, "d_b")
         at = (steps.entry(n).value for n in ("h", "c_c", "d_bs"))
@@ -203,21 +201,8 @@ def _counted(design: Design, section: ShearSection, face: Face, area: float) -> 
         met = over.start - 1 <= x <= over.end + 1
         if met and abs(over.area - area) <= _SAME * max(area, 1.0):
             return over.shares
-    if area < 1.0 and design.model.inputs.bars_given:  # less than 1 mm2: none
-        raise UserError(list(_uncovered(design, section, face, x)))
     msg = f"{section.key}: the bars of the {face} have another area than {area!r}"
     raise AssertionError(msg)
-
-
-def _uncovered(design: Design, section: ShearSection, face: Face, x: float) -> Iterator[str]:
-    """Say where bars given do not cover what they must, if none count where shear is checked."""
-    yield (
-        f"bars: no {face} bars count {section.demand.x:.0f} mm from the left axis of span "
-        f"{section.span} (mark {x:.0f} mm), where its shear is checked ({section.demand.case}); "
-        "write bars that pass there"
-    )
-    for gap in covered(design.designed, design.runs).gaps:
-        yield f"bars: {gap}"
 
 
 def _needed(model: Model, section: ShearSection) -> Entry:

@@ -117,6 +117,10 @@ def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> bo
     if basis.method == "general":
         if section.counts:
             steps.line(torsion.SHEAR_IN_STRAIN)
+        if section.A_s == 0:  # the strain of no bars at all is no number
+            steps.line(torsion.LEAST_BARS if section.counts else shear.LEAST_BARS)
+            steps.check(shear.BARS_IN_RANGE)
+            return False
         steps.line(torsion.EPS_X if section.counts else shear.EPS_X)
         if not steps.check(shear.STRAIN_IN_RANGE):
             return False

@@ -11,7 +11,7 @@ import numpy as np
 from lineproof.beams.continuous.forces import Demand, End, Forces
 from lineproof.beams.continuous.shear_check import SpanCheck, Spot, at_bearing
 from lineproof.beams.continuous.shear_numbers import SpanEnd
-from lineproof.beams.continuous.shear_state import loads_near
+from lineproof.beams.continuous.shear_state import LEAST_AREA, loads_near
 
 Place = Literal["d_v", "face", "station"]
 _MORE = 1 + 1e-9
@@ -168,7 +168,7 @@ def _section(
         tension="bottom" if bottom else "top",
         mixed=at_end and bool(critical.mixed[row]),
         d=float(v["d"][row, column]),
-        A_s=float(v["A_s"][row, column]),
+        A_s=_area(float(v["A_s"][row, column])),
         A_sp=float(v["A_sp"][row, column]),
         spacing=check.bands[check.owner(row, column)].spacing,
         spot=spot,
@@ -185,6 +185,11 @@ def _section(
             **{n: float(check.bars[n][row, column]) for n in ("tension", "compression", "bearing")},
         },
     )
+
+
+def _area(A_s: float) -> float:
+    """Return the area of the bars in tension; 0 where the smallest area stands for none."""
+    return A_s if A_s > LEAST_AREA else 0.0
 
 
 def _near_loads(check: SpanCheck, forces: Forces, end: End, row: int, column: int) -> str:

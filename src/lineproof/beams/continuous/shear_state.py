@@ -37,7 +37,7 @@ MOST_PER_CORNER_BAR = 16.0
 """Largest spacing of closed stirrups over the diameter of their corner bars (11.2.7)."""
 COARSE = 20.0
 """Size of aggregate from which the simplified method needs no s_ze [mm] (11.3.6.3)."""
-_LEAST_AREA = 1e-3
+LEAST_AREA = 1e-3
 """Area that stands for none, so that the strain is large instead of undefined [mm2]."""
 _DEEP_FOR_PLAIN = 750.0
 
@@ -388,7 +388,7 @@ def _strain(basis: ShearBasis, v: dict[str, Any]) -> None:
         coarse = v["a_g"] >= COARSE
         v["beta_plain"] = value(shear.BETA_D_V if coarse else shear.BETA_S_ZE, v)
         return
-    v["A_s"] = np.maximum(v["A_s"], _LEAST_AREA)
+    v["A_s"] = np.maximum(v["A_s"], LEAST_AREA)
     asked = value(shear.EPS_X, v)
     if v["counts"].any():
         v["V_fe"] = value(torsion.SHEAR_IN_STRAIN, v)

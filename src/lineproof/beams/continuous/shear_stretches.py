@@ -34,6 +34,7 @@ from lineproof.beams.continuous.shear_numbers import (
     SpanNumbers,
     Stretch,
 )
+from lineproof.beams.continuous.shear_state import MOST_STRAIN
 from lineproof.beams.continuous.stirrups_choice import Choice
 from lineproof.beams.continuous.torsion_inputs import span_torsion
 
@@ -235,7 +236,8 @@ def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ..
         columns = check.state.columns + left
         V_s, v = np.asarray(check.bars["V_s"]), check.state.v
         V_c = np.where(check.plain, v["V_plain"], v["V_c"])
-        V_r = np.minimum(V_c + V_s, v["V_rmax"])
+        in_range = v["eps_asked"] <= MOST_STRAIN * (1 + 1e-12)  # beyond it there is no resistance
+        V_r = np.where(in_range, np.minimum(V_c + V_s, v["V_rmax"]), 0.0)
         for i, (start, end) in enumerate(pairwise(columns.tolist())):
             both = [i, i + 1]
             if end - start > _SHORT:

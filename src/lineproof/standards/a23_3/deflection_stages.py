@@ -71,6 +71,24 @@ UNCRACKED_TOP = _criterion(
     no="Cracked: the effective moment of inertia counts.",
     key="uncracked-top",
 )
+WHOLE = _criterion(
+    "M_a <= M_crd",
+    clause="9.8.2.3",
+    title="Section without bars, bottom in tension",
+    basis=MECHANICS,
+    yes="The section is not cracked.",
+    no="The section cracks and no bars count in it: it has NO stiffness, no deflection is given.",
+    key="deflection-whole",
+)
+WHOLE_TOP = _criterion(
+    "M_a <= M_crdn",
+    clause="9.8.2.3",
+    title="Section without bars, top in tension",
+    basis=MECHANICS,
+    yes="The section is not cracked.",
+    no="The section cracks and no bars count in it: it has NO stiffness, no deflection is given.",
+    key="deflection-whole-top",
+)
 GROSS = _formula(
     "I_e = I_g", clause="9.8.2.3", title="Effective moment of inertia, not cracked", basis=MECHANICS
 )
@@ -243,4 +261,13 @@ FORMULAS = (
     FIRST_POINT, SECOND_POINT, MIDDLE, LONG_TERM_PLAIN, LONG_TERM_ATTACHED_PLAIN, RISE,
     RISE_ATTACHED, CAMBER,
 )  # fmt: skip
-CRITERIA = (UNCRACKED, UNCRACKED_TOP, RISE_SMALL, BOUND_SIMPLE, BOUND_ONE_END, BOUND_BOTH_ENDS)
+CRITERIA = (
+    UNCRACKED,
+    UNCRACKED_TOP,
+    WHOLE,
+    WHOLE_TOP,
+    RISE_SMALL,
+    BOUND_SIMPLE,
+    BOUND_ONE_END,
+    BOUND_BOTH_ENDS,
+)

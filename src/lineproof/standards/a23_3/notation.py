@@ -46,6 +46,7 @@ _ROWS = (
     ("A_s1", "A", "s1", "", "area of bars in the first layer", "mm2"),
     ("A_s2", "A", "s2", "", "area of bars in the second layer", "mm2"),
     ("A_sp", "A", "s", "′", "area of compression reinforcement", "mm2"),
+    ("A_sx", "A", "s,x", "", "least area of tension bars for the strain to be in range", "mm2"),
     ("A_sr", "A", "s,req", "", "area of tension reinforcement that the moment requires", "mm2"),
     ("A_smin", "A", "s,min", "", "minimum area of tension reinforcement", "mm2"),
     ("A_sb", "A", "s,b", "", "area of tension reinforcement at the balanced condition", "mm2"),

@@ -351,6 +351,21 @@ STRAIN_IN_RANGE = _criterion(
     no="The strain lies OUTSIDE the range of the method: more longitudinal steel.",
     key="strain-range",
 )
+LEAST_BARS = _formula(
+    "A_sx = (max(M_f, V_f*d_v)/d_v + V_f)/(2*E_s*0.003)",
+    clause="11.3.6.4",
+    title="Least bars with which the strain is in the range of the method",
+    basis=MECHANICS,
+)
+BARS_IN_RANGE = _criterion(
+    "A_sx <= A_s",
+    clause="11.3.6.4",
+    title="Bars on the face in tension, for the general method",
+    basis=FROM_MEMORY,
+    yes="The bars keep the strain within the range of the method.",
+    no="The bars do NOT keep the strain within the range of the method: no shear resistance.",
+    key="strain-bars",
+)
 BETA_STIRRUPS = _formula(
     "beta = 0.40/(1 + 1500*eps_x)",
     clause="11.3.6.4",
@@ -375,12 +390,13 @@ THETA = _formula(
 FORMULAS = (
     D_V, CRITICAL_AT_D_V, CRITICAL_AT_FACE, STIRRUP_LEGS, BESIDE_CHANGE, BESIDE_END,
     V_C, V_S, V_R_MAX, V_R, V_R_PLAIN, WITH_RESTRAINT, A_V_MIN, SPACING_MINIMUM, SPACING_REQUIRED,
-    S_MAX, S_MAX_HALVED, BETA_D_V, BETA_S_ZE, A_G, S_Z, S_Z_LAYERS, S_ZE, EPS_X, BETA_STIRRUPS,
-    BETA_GENERAL, THETA,
+    S_MAX, S_MAX_HALVED, BETA_D_V, BETA_S_ZE, A_G, S_Z, S_Z_LAYERS, S_ZE, EPS_X, LEAST_BARS,
+    BETA_STIRRUPS, BETA_GENERAL, THETA,
 )  # fmt: skip
 CRITERIA = (
     NEAR_POINT_LOADS, STRENGTH, RESTRAINT_STRENGTH, WEB_HOLDS, NEEDS_STIRRUPS, DEPTH_NEEDS_STIRRUPS,
     HAS_MINIMUM, CLOSER, SPACING, GRADE_FOR_SIMPLIFIED, CONCRETE_FOR_SIMPLIFIED, SHALLOW,
-    SHALLOW_BELOW_SLAB, LAYER_COUNTS, STRAIN_IN_RANGE, CLEAR_SPACE, DEPTH_WITHOUT_STIRRUPS,
+    SHALLOW_BELOW_SLAB, LAYER_COUNTS, STRAIN_IN_RANGE, BARS_IN_RANGE, CLEAR_SPACE,
+    DEPTH_WITHOUT_STIRRUPS,
 )  # fmt: skip
 TABLES = (SIMPLIFIED, SPECIAL)

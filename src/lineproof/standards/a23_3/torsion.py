@@ -184,6 +184,12 @@ EPS_X = _formula(
     title="Longitudinal strain at mid-depth, with torsion",
     basis=FROM_MEMORY,
 )
+LEAST_BARS = _formula(
+    "A_sx = (max(M_f, V_f*d_v)/d_v + V_fe)/(2*E_s*0.003)",
+    clause="11.3.10.5",
+    title="Least bars with which the strain is in the range of the method, with torsion",
+    basis=MECHANICS,
+)
 SHEAR_IN_BARS = _formula(
     "V_le = sqrt((V_f - 0.5*min(V_s, V_f))**2 + (0.45*p_h*T_f/(2*A_o))**2)",
     clause="11.3.10.6",
@@ -220,7 +226,7 @@ CORNER_BARS = _criterion(
 
 FORMULAS = (
     AREA_RECTANGLE, PERIMETER_RECTANGLE, AREA_OF_STIRRUP, PERIMETER_OF_STIRRUP, A_O, T_CR,
-    COMPATIBILITY, T_R, LEG_FOR_TORSION, LEGS_FOR_SHEAR, LEGS, SHEAR_IN_STRAIN, EPS_X,
+    COMPATIBILITY, T_R, LEG_FOR_TORSION, LEGS_FOR_SHEAR, LEGS, SHEAR_IN_STRAIN, EPS_X, LEAST_BARS,
     SHEAR_IN_BARS, TENSION_SIDE, COMPRESSION_SIDE, END_SUPPORT, OVERHANG, AREA_L, PERIMETER_L,
     AREA_T, PERIMETER_T, T_CR_FLANGE, TORQUE, TORQUE_CANTILEVER, LEGS_LEFT,
     FROM_FACE,

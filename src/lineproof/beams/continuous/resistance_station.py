@@ -1,0 +1,250 @@
+"""Recorded: one station of the bars as detailed, its moment or its tension against them."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from lineproof.beams.continuous.anchorage import bar_of
+from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
+from lineproof.beams.continuous.cutoff import half_of
+from lineproof.beams.continuous.cutoff_ends import at_section, top_section
+from lineproof.beams.continuous.cutoff_sets import (
+    Group,
+    begin,
+    grouped,
+    record_developed,
+    record_resistance,
+)
+from lineproof.beams.continuous.cutoff_support import Hooks, record_section
+from lineproof.beams.continuous.forces import Demand, End
+from lineproof.beams.continuous.resistance import Standing, top_layers
+from lineproof.beams.continuous.resistance_cover import Station
+from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, stretch_at
+from lineproof.beams.flexure import required
+from lineproof.beams.steps import Steps
+from lineproof.record import Entry
+from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import cutoff as clause
+from lineproof.standards.a23_3 import flexure, shear_bars
+
+COVERAGE = "coverage"
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Laid:
+    """The bars as laid with what is recorded of them: development lengths, hooks."""
+
+    writers: Writers
+    lengths: Lengths
+    hooked: Hooks
+    standing: Sequence[Standing]
+
+
+def _near(writers: Writers, station: Station) -> tuple[End, float]:
+    """Return the nearer support of a station and its distance from that axis."""
+    length = writers.designed.outline.lengths[station.span - 1]
+    if station.local <= length / 2:
+        return "left", station.local
+    return "right", length - station.local
+
+
+def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
+    """Record the moment of a station against the bars there, in a part; a failing check if none."""
+    if station.M_r <= 0:
+        _record_nothing(laid.writers, station, key, title)
+        return
+    writers, face = laid.writers, station.face
+    near, t = _near(writers, station)
+    with writers.sheet.part(key, title):
+        steps = _developed(laid, station)
+        record_resistance(steps, writers, face)
+        x = _record_place(writers, station, near, t)
+        demand = _demand(writers, station, tension=False)
+        writers.forces(steps, demand, near, x)
+        steps.check(flexure.STRENGTH)
+
+
+def _record_nothing(writers: Writers, station: Station, key: str, title: str) -> None:
+    """Record a check that fails: no bars count at a station that a moment asks for."""
+    sheet, face = writers.sheet, station.face
+    near, t = _near(writers, station)
+    with sheet.part(key, title):
+        sheet.note(
+            "no-bars",
+            f"At {station.local:g} mm from the left axis of span {station.span} no {face} bars "
+            "count: none stand there, or they end there.",
+            title="Gap",
+        )
+        steps = begin(writers, sheet, station.span, face)
+        x = _record_place(writers, station, near, t)
+        writers.forces(steps, _demand(writers, station, tension=False), near, x)
+        steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
+        steps.check(flexure.STRENGTH)
+
+
+def _record_place(writers: Writers, station: Station, near: End, t: float) -> Entry:
+    """Record the place of the forces of a station: inside a support, that of its face."""
+    half = half_of(writers.designed, station.span, near)
+    if t >= half:
+        return writers.sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+    writers.sheet.note(
+        "inside",
+        f"The station lies inside the support, {t:g} mm from its axis: there the moment of the "
+        "face counts.",
+        title="Place",
+    )
+    return writers.sheet.given("x_st", plain(half, "mm"), source="face of the support")
+
+
+def _demand(writers: Writers, station: Station, *, tension: bool) -> Demand:
+    """Return the forces of the case that governs at a station; the shear of its worse side."""
+    forces = writers.designed.forces
+    now = demand_at(writers.designed, station.span, np.array([station.local]))
+    side = now.side(station.face)
+    row = int((side.F_row if tension else side.M_row)[0])
+    start, end = forces.beam.faces(station.span)
+    x = min(max(station.local, start), end)
+    both = [forces.demand(station.span, x, s, row) for s in ("left", "right")]
+    return max(both, key=lambda d: abs(d.V))
+
+
+def _developed(laid: Laid, station: Station) -> Steps:
+    """Record inside the open part the bars of a station, counted as far as they are developed."""
+    writers = laid.writers
+    steps = begin(writers, writers.sheet, station.span, station.face)
+    rows: dict[tuple[Group, float, str], tuple[Group, float, Entry]] = {}
+    for bars in laid.standing:
+        if bars.run.face != station.face:
+            continue
+        part = float(bars.developed(np.array([station.x]))[0])
+        if part <= 0:
+            continue
+        l_av, needed = _available(laid, bars, station.x)
+        (group,) = grouped(writers, (bars.run,))
+        whole = part >= 1
+        key = (
+            Group(group.layer, group.size, 0, group.first),
+            0.0 if whole else l_av,
+            "" if whole else needed.id,
+        )
+        before = rows.get(key)
+        number = group.number + (before[0].number if before else 0)
+        if before and before[1] / before[2].value < l_av / needed.value:
+            l_av, needed = before[1], before[2]
+        rows[key] = (Group(group.layer, group.size, number, group.first), l_av, needed)
+    if not rows:
+        none = writers.sheet.given("A_sd", "0 mm2", source="no bars count here")
+        steps.bind(A_sd=none, A_s=none)
+        return steps
+    record_developed(steps, rows.values())
+    return steps
+
+
+def _available(laid: Laid, bars: Standing, x: float) -> tuple[float, Entry]:
+    """Return the length to the end that governs, and the recorded length needed there."""
+    writers = laid.writers
+    recorded = laid.lengths[bar_of(writers.designed, bars.run)]
+    last = len(writers.designed.outline.supports)
+    ends = (
+        (x - bars.run.start, bars.rise_start, bars.run.hook_start, bars.lap_start, 1),
+        (bars.run.end - x, bars.rise_end, bars.run.hook_end, bars.lap_end, last),
+    )
+    length, rise, hook, lap, support = min(ends, key=lambda end: end[0] / end[1])
+    if hook:
+        return length, laid.hooked[support, bars.run.size]
+    if lap and length < rise and rise > recorded["l_s"].value:
+        return length, _overlap(writers.sheet, rise)
+    return length, recorded["l_s" if lap else "l_d"]
+
+
+def _overlap(sheet: Sheet, length: float) -> Entry:
+    """Return the overlap of lapped bars that is longer than the lap, recorded once in a part."""
+    known = [e for k, e in sheet.part_entries.items() if k.startswith("l_lp")]
+    for entry in known:
+        if entry.value == length:
+            return entry
+    name = f"l_lp{len(known) or ''}"
+    return sheet.given(name, plain(length, "mm"), "overlap of the lapped bars", source="as laid")
+
+
+def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
+    """Record the tension of a station, moment and shear, against the bars there, in a part."""
+    writers, face = laid.writers, station.face
+    designed, sheet = writers.designed, writers.sheet
+    near, t = _near(writers, station)
+    middle = sum(designed.forces.beam.faces(station.span)) / 2
+    end: End = "left" if station.local < middle else "right"
+    d_v = _section(laid, station, end, key)["d_v"]
+    side = demand_at(designed, station.span, np.array([station.local])).side(face)
+    capped = float(side.free[0]) > float(side.cap[0])
+    cap = _record_cap(laid, station, end, key) if capped else None
+    with sheet.part(key, title):
+        steps = _developed(laid, station)
+        x = sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+        demand = _demand(writers, station, tension=True)
+        writers.forces(steps, demand, near, x)
+        _record_shear(writers, steps, station)
+        helps = demand.M > 0 if face == "bottom" else demand.M < 0
+        steps.bind(d_v=d_v)
+        steps.line(clause.TENSION if helps else clause.TENSION_OTHER_SIDE)
+        if cap is None:
+            steps.check(shear_bars.TENSION_SIDE_HOLDS)
+            return
+        steps.bind(A_sr=cap)
+        steps.line(shear_bars.TENSION_SIDE_CAPPED)
+        steps.check(shear_bars.CAPPED_HOLDS)
+
+
+def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:
+    stretch = stretch_at(writers.designed, station.x)
+    if writers.designed.shear:
+        writers.shear(steps, stretch)
+        return
+    steps.bind(
+        V_s=writers.sheet.given("V_s", "0 kN", source="no stirrups counted"),
+        theta=writers.sheet.given("theta", plain(stretch.theta, "deg"), source="11.3.6.3"),
+    )
+
+
+def _section(laid: Laid, station: Station, end: End, key: str) -> dict[str, Entry]:
+    """Return the recorded section that a station belongs to; record it where there is none."""
+    writers, span = laid.writers, station.span
+    sheet = writers.sheet
+    support = span if end == "left" else span + 1
+    known = f"anchorage-bottom-{span}"
+    if station.face == "top":
+        known = f"anchorage-top-{support}-{'right' if end == 'left' else 'left'}"
+    if any(part.key == known for part in sheet.parts):
+        return sheet.entries_of(known)
+    title = f"Top bars at support {support}"
+    with sheet.part(f"{key.removesuffix('-tension')}-section", title):
+        place = top_section(writers.designed.outline, support)
+        there = at_section((bars.run for bars in laid.standing), "top", place)
+        stated = title if there else f"{title}: none; for the depth alone, in the corners"
+        record_section(writers, top_layers(writers.designed, support), span, "top", stated)
+    return sheet.entries_of(f"{key.removesuffix('-tension')}-section")
+
+
+def _record_cap(laid: Laid, station: Station, end: End, key: str) -> Entry:
+    """Record the steel that the largest moment of the face needs alone; return A_sr."""
+    writers, face = laid.writers, station.face
+    sheet, designed = writers.sheet, writers.designed
+    section = _section(laid, station, end, key)
+    demand = largest_at(designed, face, station.span, end)
+    length = designed.outline.lengths[station.span - 1]
+    near: End = "left" if demand.x <= length / 2 else "right"
+    t = float(round(demand.x if near == "left" else length - demand.x))  # flat there: 1 mm is near
+    at = t if near == "left" else length - t
+    demand = designed.forces.demand(station.span, at, demand.side, demand.row)
+    title = f"{face.capitalize()} bars: what the largest moment of span {station.span} needs alone"
+    with sheet.part(f"{key.removesuffix('-tension')}-largest", title):
+        steps = begin(writers, sheet, station.span, face)
+        steps.bind(d=section["d"])
+        x = sheet.given("x_st", plain(t, "mm"), source="place of the largest moment")
+        writers.forces(steps, demand, near, x)
+        flanged = face == "bottom" and designed.outline.h_f > 0
+        required(steps, designed.outline.shape if flanged else "rectangular")
+        return steps.entry("A_sr")
