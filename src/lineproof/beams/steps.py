@@ -54,9 +54,10 @@ class Steps:
         """Tell whether a comparison would hold here, without recording it."""
         return test.holds(*test.sides({name: self.entry(name).value for name in test.names}))
 
-    def check(self, test: Criterion, key: str = "", **bound: Entry) -> Entry:
-        """Record a check."""
-        return self.sheet.check(test, key=key, **only(self.place | bound, test.names))
+    def check(self, test: Criterion, key: str = "", title: str = "", **bound: Entry) -> Entry:
+        """Record a check, under a title of its own if one is given."""
+        args = only(self.place | bound, test.names)
+        return self.sheet.check(test, key=key, title=title, **args)
 
     def found(
         self,

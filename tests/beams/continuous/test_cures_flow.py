@@ -16,14 +16,13 @@ import pytest
 from lineproof import beams
 from lineproof.beams.continuous import beam as flow
 from lineproof.beams.continuous import cures_checks
-from lineproof.beams.continuous.cures_flow import NO_BARS, NOT_SOUGHT, cure_text, failing
+from lineproof.beams.continuous.cures_flow import NOT_SOUGHT, failing
 from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, bound_names
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.record.entry import CHECK
 from lineproof.record.printing import utilisation
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import flexure
 
 from .flow import CALLS, PROJECT, run, start
 from .test_edge_beam import inputs_of
@@ -283,22 +282,6 @@ def test_the_existing_beam_holds_what_it_was_built_for_and_not_what_is_asked() -
     assert not [key for key in bad if key.startswith(("sag", "deflection", "anchorage-bottom"))]
     strength = {k for k in bad for e in asked.entries_of(k) if e == "shear-strength"}
     assert all(check(asked, f"{key}/shear-strength") for key in strength)
-
-
-def test_a_gap_without_bars_says_that_bars_are_missing() -> None:
-    """No section cures what no bar crosses; with bars that are too few it is another matter."""
-    started = start()
-    run(started, FLEXURE[:3])
-    sheet = Sheet("B1")
-    for part, held in (("gap", "0 kN.m"), ("few", "90 kN.m")):
-        with sheet.part(part, "A station"):
-            sheet.given("M_f", "100 kN.m")
-            sheet.given("M_r", held)
-            sheet.check(flexure.STRENGTH)
-    gap, few = (check(sheet, f"{part}/strength") for part in ("gap", "few"))
-
-    assert cure_text(started.model, gap) == NO_BARS
-    assert cure_text(started.model, few) == NOT_SOUGHT
 
 
 def test_what_is_not_about_the_section_says_so() -> None:

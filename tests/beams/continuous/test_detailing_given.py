@@ -11,7 +11,7 @@ import pytest
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.detailing import lay_bars
 from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
-from lineproof.beams.continuous.detailing_given import read_given_runs, section_bars_of
+from lineproof.beams.continuous.detailing_given import beside_gap, read_given_runs, section_bars_of
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.errors import UserError
@@ -102,10 +102,12 @@ def test_two_sizes_in_one_layer_are_refused() -> None:
         section_bars_of(runs, BASIS.outline, "15M")
 
 
-def test_no_bars_at_midspan_are_refused() -> None:
-    runs = read_given_runs([row(end="3 m")], BASIS, PAIR)
-    with pytest.raises(UserError, match="no bottom bars stand at the middle of span 1"):
-        section_bars_of(runs, BASIS.outline, "15M")
+def test_where_no_bars_stand_at_midspan_the_nearest_are_known() -> None:
+    """2-25M end at 3 m and 2-20M begin at 4.2 m, the middle is at 3.5 m: the 25M are nearer."""
+    runs = read_given_runs([row(end="3 m"), row(bars="2-20M", start="4.2 m")], BASIS, PAIR)
+    assert section_bars_of(runs, BASIS.outline, "15M").bottom == ((),)
+    assert beside_gap(runs, BASIS.outline, 1) == (BarLayer(2, "25M"),)
+    assert beside_gap((), BASIS.outline, 1) == ()
 
 
 def spoiled(change: Callable[[BarRun], BarRun]) -> bool:

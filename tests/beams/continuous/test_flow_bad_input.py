@@ -10,7 +10,7 @@ import pytest
 from lineproof.errors import UserError
 from lineproof.sheet import Sheet
 
-from .flow import CALLS, PROJECT, run, start
+from .flow import CALLS, PROJECT, start
 
 BOTTOM = {"face": "bottom", "bars": "4-25M", "start": "-0.15 m", "end": "24.55 m"}
 TOP = {"face": "top", "bars": "5-25M", "start": "-0.15 m", "end": "24.55 m"}
@@ -180,18 +180,6 @@ def test_bars_along_the_beam_that_cannot_stand() -> None:
     )
 
 
-def test_no_bars_at_midspan() -> None:
-    """Runs that leave the middle of span 2 without any bottom bars name the place."""
-    matches(
-        refused_at(
-            "flexure",
-            bar_runs=[BOTTOM | {"end": "12.1 m"}, BOTTOM | {"start": "12.3 m"}, TOP],
-        ),
-        "bar runs: no bottom bars stand at the middle of span 2, 12200 mm from the axis of "
-        "support 1; write a run of bars that passes there",
-    )
-
-
 def test_stirrups_closer_than_the_clear_space() -> None:
     """60 - 11.3 = 49 mm clear, 80 - 11.3 = 69 mm; a zone outside its span beside them."""
     matches(
@@ -275,23 +263,6 @@ def test_a_construction_stage_beside_single_live_loads() -> None:
         ),
         "construction_load: 2.4 kPa cannot stand in the place of single live loads (load 2); leave",
     )
-
-
-def test_a_span_whose_middle_hogs_and_cracks_without_bars_through() -> None:
-    """Thick bars given at the end of 3.5 m are not developed at its midspan, where others end."""
-    beam = start(spans=["3.5 m", "9 m", "3.5 m"], top_bars=["2-35M", None, None, "2-15M"])
-    run(beam, CALLS[: CALLS.index("deflections")])
-    with pytest.raises(UserError) as caught:
-        beam.deflections()
-    matches(
-        list(caught.value.faults),
-        "span 1, midspan: the moment under service load is hogging and cracks the section, and no "
-        "top bars run through it, developed to both sides, so no deflection is computed here; "
-        "write a deeper beam or stronger concrete, so that it stays whole, or give bar_runs with "
-        "top bars through midspan",
-    )
-    with pytest.raises(UserError, match=r"beam\.deflections\(\) stopped with an error"):
-        beam.sheet.close()
 
 
 def test_end_supports_too_narrow_for_hooks() -> None:

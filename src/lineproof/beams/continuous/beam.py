@@ -91,7 +91,7 @@ class ContinuousBeam:
     def _cure(self, part: Part) -> None:
         """Record in a part that is about to close what would cure the checks that fail in it."""
         if failing(part):
-            record_cures(self.model, part)
+            record_cures(self.design, part)
 
     def loads(self) -> None:
         """Record the columns that hold the beam and the load take-down."""

@@ -152,11 +152,14 @@ def deflecting(
     *,
     carries: str,
     history: History | None = None,
+    rise: bool = False,
     f_c: float = 0.0,
     lambda_: float = 1.0,
     gamma_c: float = 2400.0,
 ) -> Utilisation:
     """Return the limited deflection over its limit; h, b_w, A_s, A_sp and f_c may be changed.
+
+    With ``rise`` that by which the span is lifted; its moments must hold that stage.
 
     ``A_s`` and ``A_sp`` are those at midspan, or at the root of a cantilever; f_c, lambda and the
     density are needed where the concrete may be changed.
@@ -170,7 +173,8 @@ def deflecting(
             rule = materials.E_C_NORMAL if normal else materials.E_C_GENERAL
             follow(values, rule, materials.F_R)
             made = replace(made, E_c=values["E_c"], f_r=values["f_r"])
-        return deflections(made, moments, carries=carries, history=history).utilisation
+        found = deflections(made, moments, carries=carries, history=history)
+        return found.rise_used if rise else found.sag_used
 
     return utilisation
 

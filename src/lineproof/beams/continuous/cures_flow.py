@@ -9,12 +9,20 @@ from collections.abc import Iterable, Iterator
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure, Variable, told
+from lineproof.beams.continuous.cures_cuts import cut_cures, cut_of
+from lineproof.beams.continuous.cures_gaps import (
+    gap_cures,
+    gap_of,
+    section_gap_cures,
+    without_bars,
+)
 from lineproof.beams.continuous.cures_replay import bound_names
 from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
 from lineproof.beams.continuous.deflection import Behind, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
 from lineproof.beams.continuous.deflection_service import span_behind
 from lineproof.beams.continuous.deflections import history_of
+from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.shear_chapter import STIRRUPS
 from lineproof.beams.continuous.summary_tables import Row, ratio_text
@@ -24,13 +32,13 @@ from lineproof.record.entry import CHECK
 from lineproof.record.printing import utilisation
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
-from lineproof.standards.a23_3 import flexure, shear
+from lineproof.standards.a23_3 import shear
 
 NOT_SOUGHT = (
     "Depth, steel, width and concrete strength are not what this check is about: no cure is sought "
     "among them."
 )
-NO_BARS = "No depth, width or concrete strength helps: no bars count here, some must reach here."
+NONE_CROSS = "Bars that cross this section are needed; how many, the check of its moment says."
 COLUMNS = [
     "Place",
     "Check that fails",
@@ -41,6 +49,8 @@ WIDTHS = (44.0, 44.0, 20.0, 0.0)
 TITLE = "What fails and what would cure it"
 _DEFLECTIONS = (clause.LIVE_SMALL, clause.ATTACHED_SMALL, stages.RISE_SMALL)
 _PART = re.compile(r"deflection-(\d+)")
+_BARS = ("A_s", "A_sd")
+"""Areas of bars: in a gap, further bars are told with their length instead."""
 _SAME = 1e-9
 _WIDEST, _LEAST = 625.0, 75.0
 
@@ -53,14 +63,14 @@ def failing(part: Part) -> list[Entry]:
     ]  # fmt: skip
 
 
-def record_cures(model: Model, part: Part) -> None:
+def record_cures(design: Design, part: Part) -> None:
     """Record in the open part, after every check that fails, what would cure it."""
     said: dict[str, list[str]] = {}
     for check in failing(part):
-        said.setdefault(cure_text(model, check), []).append(check.symbol)
+        said.setdefault(cure_text(design, check), []).append(check.symbol)
     for text, keys in said.items():
         title = f"Cure: {_titles(part, keys)}"  # the note may stand far below the check
-        model.sheet.note(f"cure-{keys[-1]}"[:60], text, title=title)
+        design.model.sheet.note(f"cure-{keys[-1]}"[:60], text, title=title)
 
 
 def _titles(part: Part, keys: Iterable[str]) -> str:
@@ -72,32 +82,47 @@ def _title(check: Entry) -> str:
     return title[:1].lower() + title[1:]
 
 
-def cure_text(model: Model, check: Entry) -> str:
+def cure_text(design: Design, check: Entry) -> str:
     """Return in a sentence what would cure a check that fails; plainly where nothing is known."""
-    found = _cures(model, check)
+    found = _cures(design, check)
     return told(found) if found else _why_none(check)
 
 
 def _why_none(check: Entry) -> str:
-    if check.source is flexure.STRENGTH and check.value[1] <= 0:
-        return NO_BARS
+    if check.source in (stages.WHOLE, stages.WHOLE_TOP):
+        return NONE_CROSS
     return NOT_SOUGHT
 
 
-def _cures(model: Model, check: Entry) -> list[Cure]:
+def _cures(design: Design, check: Entry) -> list[Cure]:
+    model = design.model
     if check.source in _DEFLECTIONS:
         return _deflection_cures(model, check)
+    if without_bars(check):
+        return section_gap_cures(check, lambda name: model.sheet.find(name).value, _size(design))
+    gap = gap_of(design, check)
+    if gap is not None:
+        more = (cure for cure in cures_of(check) if cure.symbol not in _BARS)
+        return [*gap_cures(design, gap), *more]
+    cut = cut_of(design, check)
+    if cut is not None:
+        return cut_cures(design, cut)
     if check.source is shear.STRENGTH and "s" not in check.part.entries:
         return [*_stirrup_cures(model, check), *cures_of(check)]
     return cures_of(check)
 
 
-def failing_rows(model: Model) -> Iterator[Row]:
+def _size(design: Design) -> str:
+    """Return the size of the thickest bars of the beam."""
+    return max(design.runs, key=lambda run: run.diameter).size
+
+
+def failing_rows(design: Design) -> Iterator[Row]:
     """Give a row for every check that fails, one for those of a part with the same cures."""
-    for part in model.sheet.parts:
+    for part in design.model.sheet.parts:
         rows: dict[str, list[Entry]] = {}
         for check in failing(part):
-            rows.setdefault(_briefly(model, check), []).append(check)
+            rows.setdefault(_briefly(design, check), []).append(check)
         for cure, checks in rows.items():
             worst = max(checks, key=lambda check: utilisation(check) or math.inf)
             titles = "; ".join(_title(check) for check in checks)
@@ -105,10 +130,10 @@ def failing_rows(model: Model) -> Iterator[Row]:
             yield Row((part.title, titles, ratio_text(worst), cure), worst)
 
 
-def _briefly(model: Model, check: Entry) -> str:
+def _briefly(design: Design, check: Entry) -> str:
     """Return the cures alone, without what would not do; the whole sentence where none does."""
-    able = [cure.text for cure in _cures(model, check) if cure.value is not None]
-    return "; or ".join(able) if able else cure_text(model, check)
+    able = [cure.text for cure in _cures(design, check) if cure.value is not None]
+    return "; or ".join(able) if able else cure_text(design, check)
 
 
 # -- stirrups where there are none -----------------------------------------------------------
@@ -152,8 +177,9 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     try:
         section, moments = bent_of(model, span, _behind(model, span))
         use = cures_checks.deflecting(
-            section, moments, carries=model.inputs.carries, history=history_of(model), **values
-        )
+            section, moments, carries=model.inputs.carries, history=history_of(model),
+            rise=check.source is stages.RISE_SMALL, **values,
+        )  # fmt: skip
         now = use({})
     except UserError:
         return []

@@ -21,6 +21,7 @@ _BENDING = (flexure.STRENGTH, flexure.YIELDS, cutoff.SUFFICES)
 _FITS = bars.FITS.key
 NONE_IN_LAYER = "no number of bars {} in one layer"
 _WIDEST = 1500
+_MOST_HANGERS = 20
 _MOST_STEEL = 6000.0
 """Area up to which steel is sought, or four times what there is [mm2]."""
 _STEP = 10.0
@@ -196,7 +197,7 @@ def _sought(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | Non
         return None
     makers: Mapping[str, Callable[[float], Variable]] = {
         "h": find.depth, "b_w": find.width, "f_c": find.concrete, "s": find.spacing,
-        "b_sp": _support, "n_o": _overhang,
+        "b_sp": _support, "n_o": _overhang, "n_h": _hangers,
     }  # fmt: skip
     return _single(name, root, makers[name](root.value))
 
@@ -209,7 +210,7 @@ def _root(name: str, check: Entry, bound: Mapping[str, Entry]) -> Entry | None:
     if name == "s":
         spacing = check.part.entries.get("s")
         return spacing if spacing is not None and spacing.kind == GIVEN else None
-    if name in ("b_sp", "n_o"):
+    if name in ("b_sp", "n_o", "n_h"):
         return bound.get(name)
     return _of_symbol(check, name, bound)
 
@@ -226,6 +227,12 @@ def _of_symbol(check: Entry, name: str, bound: Mapping[str, Entry]) -> Entry | N
 def _overhang(number: float) -> Variable:
     words = "{} bars of this size in each overhang"
     return replace(find.bar_count(int(number)), words=words)
+
+
+def _hangers(number: float) -> Variable:
+    none = f"no number of hanger stirrups up to {_MOST_HANGERS}"
+    words = "{} hanger stirrups in the joint"
+    return Variable(find.up(number, _MOST_HANGERS, 1), words, "or more", none)
 
 
 def _support(width: float) -> Variable:

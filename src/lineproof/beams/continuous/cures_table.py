@@ -49,6 +49,7 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
     hooks.FITS: ("bars", "f_c", "b_sp"),
     cutoff.DEVELOPED_AT_ZERO_MOMENT: ("bars", "A_s", "h", "f_c"),
     bearing.STRENGTH: ("b_w", "f_c"),
+    shear_bars.HANGERS_PROVIDED: ("n_h",),
     interface.STRENGTH: ("f_c",),
 }
 """What is changed, each alone, by check; ``A_s`` is an area of bars, ``bars`` their size."""
@@ -64,4 +65,5 @@ MORE_AREA: Mapping[Criterion, str] = {
     cutoff.INTO_CONTINUOUS_SUPPORT: "{:g} mm² more of bottom bars going into the support",
     cutoff.TOP_PAST_INFLECTION: "{:g} mm² more of top bars going past the inflection",
     cutoff.CUT_AT_DOUBLE_AREA: "{:g} mm² more of bars going on",
+    shear.BARS_IN_RANGE: "{:g} mm² more of bars developed on the face in tension",
 }

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from itertools import pairwise
 
 import numpy as np
 
-from lineproof.beams.continuous.cutoff import distance, far_face, half_of, local, sag_at
+from lineproof.beams.continuous.anchorage import development_length
+from lineproof.beams.continuous.cutoff import along, distance, far_face, half_of, local, sag_at
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
@@ -15,6 +17,8 @@ from lineproof.beams.continuous.resistance import alike, lap_pairs, lapped, leve
 from lineproof.beams.continuous.resistance_demand import NOTHING
 
 Runs = tuple[BarRun, ...]
+_INSIDE = 1.0
+"""How far inside the face of a support its bars are looked at [mm]."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -91,8 +95,11 @@ def _beside(first: BarRun, second: BarRun, i: int, j: int, x: float) -> int:
 
 
 def bottom_side(designed: Designed, runs: Runs, span: int, near: End) -> SideOf:
-    """Return how the bottom bars of a span end towards a support."""
-    there = at_section(runs, "bottom", sag_at(designed, span))
+    """Return how the bottom bars of a span end towards a support.
+
+    The bars are those of the largest moment; where none stand there, the nearest on this side.
+    """
+    there = _bottom_bars(designed, runs, span, near)
     tips = [
         (distance(designed, span, near, tip(whole(designed, runs, r, near), near)), r)
         for r in there
@@ -105,6 +112,43 @@ def bottom_side(designed: Designed, runs: Runs, span: int, near: End) -> SideOf:
     return SideOf(
         "bottom", span, near, there, endings, kept, max((t for t, _ in inside), default=half)
     )
+
+
+def _bottom_bars(designed: Designed, runs: Runs, span: int, near: End) -> Runs:
+    at = sag_at(designed, span)
+    there = at_section(runs, "bottom", at)
+    if there:
+        return there
+    start, end = designed.outline.faces(span)
+    own = tuple(run for run in runs if _belongs(designed, run, span))
+    low, high = (start, at) if near == "left" else (at, end)
+    ends = {low, high, *(x for r in own for x in (r.start, r.end) if low < x < high)}
+    places = [(a + b) / 2 for a, b in pairwise(sorted(ends))]
+    found = (at_section(own, "bottom", x) for x in sorted(places, key=lambda x: abs(x - at)))
+    return next((met for met in found if met), ())
+
+
+def _belongs(designed: Designed, run: BarRun, span: int) -> bool:
+    """Tell whether a run stands in a span with its development length or more."""
+    start, end = designed.outline.faces(span)
+    length = min(run.end, end) - max(run.start, start)
+    return length > 0 and length >= development_length(designed, run)
+
+
+def at_support(designed: Designed, runs: Runs, side: SideOf) -> SideOf:
+    """Return a side of bottom bars with those that stand at the support as kept.
+
+    Past a gap they are others than those of the section, all of which are cut before it.
+    """
+    if side.kept:
+        return side
+    near, half = side.near, half_of(designed, side.span, side.near)
+    own = [run for run in runs if _belongs(designed, run, side.span)]
+    there = at_section(own, "bottom", along(designed, side.span, near, half + _INSIDE))
+    tips = [(distance(designed, side.span, near, tip(r, near)), r) for r in there]
+    inside = [(t, r) for t, r in tips if t <= half]
+    t_kept = max((t for t, _ in inside), default=half)
+    return replace(side, cuts=(), kept=tuple(r for _, r in inside), t_kept=t_kept)
 
 
 def top_side(designed: Designed, runs: Runs, support: int, side: End) -> SideOf:

@@ -144,8 +144,17 @@ class Deflections:
     @property
     def utilisation(self) -> float:
         """The deflection that is limited, or the rise where that may govern, over the limit."""
-        sag = self.live if self.by_live else self.attached
-        return max(sag, sag if self.rise is None else self.rise) / self.allowed
+        return max(self.sag_used, self.rise_used)
+
+    @property
+    def sag_used(self) -> float:
+        """The deflection that is limited, over the limit."""
+        return (self.live if self.by_live else self.attached) / self.allowed
+
+    @property
+    def rise_used(self) -> float:
+        """The rise over the limit; no more than the deflection where it cannot govern."""
+        return self.sag_used if self.rise is None else self.rise / self.allowed
 
 
 def continuity(free: FreeEnd, *ends: object | None) -> str:

@@ -12,7 +12,6 @@ from lineproof.beams.continuous.deflection import (
     deflections,
 )
 from lineproof.beams.continuous.deflection_service import (
-    STAGES,
     Stage,
     StageMoments,
     free_end,
@@ -65,7 +64,7 @@ def bent_of(
     """Return what bends in a span and its service moments at every stage, from the sheet."""
     service = service_of(model, span)
     before = _earlier(model, span)
-    moments = {stage: replace(service.stages[stage], earlier=before) for stage in STAGES}
+    moments = {stage: replace(each, earlier=before) for stage, each in service.stages.items()}
     return _section(model, span, behind), moments
 
 

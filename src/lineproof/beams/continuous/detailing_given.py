@@ -151,6 +151,13 @@ def _places(runs: Iterable[BarRun], outline: BeamOutline) -> list[float]:
     return [(a + b) / 2 for a, b in pairwise(ends)]
 
 
+def fit(runs: tuple[BarRun, ...], basis: Basis) -> bool:
+    """Tell whether bars fit into the web beside each other, wherever they stand."""
+    faults = FaultList()
+    _check_layers(runs, basis, faults)
+    return not faults.faults
+
+
 def _check_layers(runs: tuple[BarRun, ...], basis: Basis, faults: FaultList) -> None:
     """Refuse layers too full for the web; of two corner bars that are lapped one pair counts."""
     told: set[tuple[str, int]] = set()

@@ -12,7 +12,7 @@ from lineproof.beams.continuous.anchorage_record import (
     sizes_of,
 )
 from lineproof.beams.continuous.cutoff import Frame
-from lineproof.beams.continuous.cutoff_ends import Runs, bottom_side, top_side
+from lineproof.beams.continuous.cutoff_ends import Runs, at_support, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_record import Site, record_cuts
 from lineproof.beams.continuous.cutoff_support import (
     Hooks,
@@ -66,11 +66,12 @@ def _record_bottom(
     for near in SIDES:
         side = bottom_side(designed, runs, span, near)
         site = Site(writers, frame, lengths, side, section, f"{key}-{near}", title)
-        record_into_support(site)
-        record_zero_moment(site, hooked)
+        there = replace(site, side=at_support(designed, runs, side))
+        record_into_support(there)
+        record_zero_moment(there, hooked)
         record_cuts(site)
         if designed.exterior(span if near == "left" else span + 1):
-            record_end_bottom(site, hooked)
+            record_end_bottom(there, hooked)
 
 
 def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, support: int) -> None:

@@ -73,18 +73,33 @@ class Gap:
         """The largest ratio in it; infinite where no bars count."""
         return self.at.ratio
 
+    def holds(self, station: Station) -> bool:
+        """Tell whether a station lies in it."""
+        same = (station.face, station.span) == (self.face, self.span)
+        return same and self.start <= station.x <= self.end
+
+    @property
+    def title(self) -> str:
+        """Where it is, from the left axis of its span, as a check of it is called."""
+        start, end = ((x - self.left) / 1e3 for x in (self.start, self.end))
+        return (
+            f"Gap in the {self.face} bars, span {self.span}, {start:.2f} to {end:.2f} m from its "
+            "left axis"
+        )
+
     def __str__(self) -> str:
         """Say where it is, and what acts and holds at its worst station."""
         ratio = "no bars count there" if self.worst == np.inf else f"{self.worst:.2f} of what holds"
-        now, held = (self.at.F, self.at.F_r) if self.at.by_tension else (self.at.M_f, self.at.M_r)
-        name, unit = ("F", "kN") if self.at.by_tension else ("M", "kN.m")
-        size = 1e3 if self.at.by_tension else 1e6
+        at, what, unit, size = self.at, "moment", "kN·m", 1e6
+        now, held = at.M_f, at.M_r
+        if at.by_tension:
+            what, unit, size, now, held = "tension", "kN", 1e3, at.F, at.F_r
+        start, end = ((x - self.left) / 1e3 for x in (self.start, self.end))
         return (
             f"{self.face} bars, span {self.span}: not enough from {self.start:.0f} to "
-            f"{self.end:.0f} mm along the beam ({ratio}), that is from "
-            f"{(self.start - self.left) / 1e3:.2f} to {(self.end - self.left) / 1e3:.2f} m from "
-            f"the left axis of the span; worst at {self.at.local / 1e3:.2f} m: {name}_f = "
-            f"{now / size:.0f} {unit}, {name}_r = {held / size:.0f} {unit}"
+            f"{self.end:.0f} mm along the beam ({ratio}), that is {start:.2f} to {end:.2f} m from "
+            f"the left axis of the span; worst at {at.local / 1e3:.2f} m: a {what} of "
+            f"{now / size:.0f} {unit}, resistance {held / size:.0f} {unit}"
         )
 
 
@@ -218,17 +233,6 @@ def worst_of(found: Coverage, face: Face, *, tension: bool) -> Station:
 
     stations = found.by_tension if tension else found.by_moment
     return max((s for s in stations if s.face == face), key=ratio)
-
-
-def holds_worst(found: Coverage, gap: Gap) -> bool:
-    """Tell whether one of the two worst stations of a face lies in a gap and fails there."""
-    for tension in (False, True):
-        station = worst_of(found, gap.face, tension=tension)
-        used = (station.F, station.F_r) if tension else (station.M_f, station.M_r)
-        inside = station.span == gap.span and gap.start <= station.x <= gap.end
-        if inside and ratio_of(*used) > 1 + ROUND_OFF:
-            return True
-    return False
 
 
 def gap_key(number: int) -> str:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 
 import numpy as np
 
@@ -16,9 +16,10 @@ from lineproof.beams.continuous.resistance_cover import (
     FACES,
     Coverage,
     Gap,
+    Station,
     covered,
     gap_key,
-    holds_worst,
+    ratio_of,
     ratios,
     worst_of,
     yield_force,
@@ -52,28 +53,31 @@ def record_coverage(
     Every gap has a check that fails: that of the worst station of its face, or one of its own.
     """
     found = covered(writers.designed, runs, count)
-    laid = Laid(writers, lengths, hooked, stand(writers.designed, runs))
-    for face in FACES:
-        _record_worst(laid, found, face)
+    laid = Laid(writers, lengths, hooked, stand(writers.designed, runs), found.gaps)
+    shown = [station for face in FACES for station in _record_worst(laid, found, face)]
     for number, gap in enumerate(found.gaps, 1):
-        if not holds_worst(found, gap):
+        if not any(gap.holds(station) for station in shown):
             _record_gap(laid, gap, number)
     _record_table(writers, laid.standing, found, count)
     return found
 
 
-def _record_worst(laid: Laid, found: Coverage, face: Face) -> None:
-    """Record the stations that moment and tension of a face use most."""
+def _record_worst(laid: Laid, found: Coverage, face: Face) -> Iterator[Station]:
+    """Record the stations that moment and tension of a face use most; give those that fail."""
     name = f"{face.capitalize()} bars"
     station = worst_of(found, face, tension=False)
     if station.M_f > NOTHING:
         title = f"{name}: the station that their moment uses most, span {station.span}"
         record_moment(laid, station, f"{COVERAGE}-{face}", title)
+        if ratio_of(station.M_f, station.M_r) > 1:
+            yield station
     station = worst_of(found, face, tension=True)
     if station.F <= NOTHING or (station.F_r <= 0 and station.M_f > NOTHING):
         return  # nothing asked, or the gap stands with the moment
     title = f"{name}: the station that their tension uses most, span {station.span}"
     record_tension(laid, station, f"{COVERAGE}-{face}-tension", title)
+    if ratio_of(station.F, station.F_r) > 1:
+        yield station
 
 
 def _record_gap(laid: Laid, gap: Gap, number: int) -> None:

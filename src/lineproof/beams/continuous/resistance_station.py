@@ -21,7 +21,7 @@ from lineproof.beams.continuous.cutoff_sets import (
 from lineproof.beams.continuous.cutoff_support import Hooks, record_section
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.resistance import Standing, top_layers
-from lineproof.beams.continuous.resistance_cover import Station
+from lineproof.beams.continuous.resistance_cover import Gap, Station
 from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, stretch_at
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps
@@ -35,12 +35,18 @@ COVERAGE = "coverage"
 
 @dataclass(frozen=True, eq=False, slots=True)
 class Laid:
-    """The bars as laid with what is recorded of them: development lengths, hooks."""
+    """The bars as laid with what is recorded of them: development lengths, hooks; their gaps."""
 
     writers: Writers
     lengths: Lengths
     hooked: Hooks
     standing: Sequence[Standing]
+    gaps: Sequence[Gap] = ()
+
+    def title(self, station: Station) -> str:
+        """Return the title of the check of a station: where the gap is that it lies in."""
+        gap = next((gap for gap in self.gaps if gap.holds(station)), None)
+        return "" if gap is None else gap.title
 
 
 def _near(writers: Writers, station: Station) -> tuple[End, float]:
@@ -54,7 +60,7 @@ def _near(writers: Writers, station: Station) -> tuple[End, float]:
 def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
     """Record the moment of a station against the bars there, in a part; a failing check if none."""
     if station.M_r <= 0:
-        _record_nothing(laid.writers, station, key, title)
+        _record_nothing(laid, station, key, title)
         return
     writers, face = laid.writers, station.face
     near, t = _near(writers, station)
@@ -64,12 +70,13 @@ def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
         x = _record_place(writers, station, near, t)
         demand = _demand(writers, station, tension=False)
         writers.forces(steps, demand, near, x)
-        steps.check(flexure.STRENGTH)
+        steps.check(flexure.STRENGTH, title=laid.title(station))
 
 
-def _record_nothing(writers: Writers, station: Station, key: str, title: str) -> None:
+def _record_nothing(laid: Laid, station: Station, key: str, title: str) -> None:
     """Record a check that fails: no bars count at a station that a moment asks for."""
-    sheet, face = writers.sheet, station.face
+    writers, face = laid.writers, station.face
+    sheet = writers.sheet
     near, t = _near(writers, station)
     with sheet.part(key, title):
         sheet.note(
@@ -82,7 +89,7 @@ def _record_nothing(writers: Writers, station: Station, key: str, title: str) ->
         x = _record_place(writers, station, near, t)
         writers.forces(steps, _demand(writers, station, tension=False), near, x)
         steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
-        steps.check(flexure.STRENGTH)
+        steps.check(flexure.STRENGTH, title=laid.title(station))
 
 
 def _record_place(writers: Writers, station: Station, near: End, t: float) -> Entry:
@@ -191,11 +198,11 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
         steps.bind(d_v=d_v)
         steps.line(clause.TENSION if helps else clause.TENSION_OTHER_SIDE)
         if cap is None:
-            steps.check(shear_bars.TENSION_SIDE_HOLDS)
+            steps.check(shear_bars.TENSION_SIDE_HOLDS, title=laid.title(station))
             return
         steps.bind(A_sr=cap)
         steps.line(shear_bars.TENSION_SIDE_CAPPED)
-        steps.check(shear_bars.CAPPED_HOLDS)
+        steps.check(shear_bars.CAPPED_HOLDS, title=laid.title(station))
 
 
 def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:

@@ -77,7 +77,7 @@ def record_summary(design: Design) -> None:
     sheet = model.sheet
     with sheet.part(SUMMARY, "Summary of the beam"):
         record_drawings(design, DRAWN)
-        fails = list(failing_rows(model))
+        fails = list(failing_rows(design))
         if fails:
             _table(sheet, "failing", FAILING, FAILING_COLUMNS, fails, FAILS, widths=FAILING_WIDTHS)
         for number, (key, title, columns, widths, rows) in enumerate(_tables(design)):

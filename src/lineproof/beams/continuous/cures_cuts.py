@@ -1,0 +1,113 @@
+"""What would let bars end in a tension zone (12.10.5): a longer bar, closer stirrups.
+
+Each is tried by the rules themselves: at another end of the bars, or with the shear resistance of
+closer stirrups along the span.
+"""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+
+from lineproof.beams.continuous import cures as find
+from lineproof.beams.continuous import cures_checks
+from lineproof.beams.continuous.cures import Cure, Variable
+from lineproof.beams.continuous.cutoff import (
+    along,
+    far_face,
+    half_of,
+    local,
+    shear_in_tension,
+    zone_at,
+)
+from lineproof.beams.continuous.cutoff_ends import SideOf, bottom_side, top_side
+from lineproof.beams.continuous.cutoff_sets import text_of
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.resistance_demand import stretch_at
+from lineproof.beams.continuous.shear_check import SpanCheck
+from lineproof.beams.continuous.shear_stretches import stretches_of
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import cutoff as clause
+
+_PART = re.compile(r"anchorage-(bottom|top)-(\d+)-(left|right)-cut-(\d+)-shear")
+_STEP = 50.0
+_WIDEST = 625.0
+
+
+@dataclass(frozen=True, slots=True)
+class Cut:
+    """Bars of one side of a section that end in a tension zone, by their place in its cuts."""
+
+    side: SideOf
+    index: int
+
+    @property
+    def t(self) -> float:
+        """Distance of their end from the near axis [mm]."""
+        return self.side.cuts[self.index].t
+
+
+def cut_of(design: Design, check: Entry) -> Cut | None:
+    """Return the cut that a check of low shear stands for."""
+    match = _PART.fullmatch(check.part.key)
+    if match is None or check.source is not clause.CUT_AT_LOW_SHEAR:
+        return None
+    designed, runs, number = design.designed, design.runs, int(match[2])
+    end: End = "left" if match[3] == "left" else "right"
+    side = (bottom_side if match[1] == "bottom" else top_side)(designed, runs, number, end)
+    return Cut(side, int(match[4]) - 1)
+
+
+def cut_cures(design: Design, cut: Cut) -> list[Cure]:
+    """Return the cures of bars that end where the shear is not low enough."""
+    return [_longer(design, cut), _closer(design, cut)]
+
+
+def _longer(design: Design, cut: Cut) -> Cure:
+    """Return the least length more with which the bars end where they may."""
+    side, designed = cut.side, design.designed
+    inward = side.face == "bottom"
+    half, far = (f(designed, side.span, side.near) for f in (half_of, far_face))
+    going = side.continuing(cut.index)
+
+    def use(changes: Mapping[str, float]) -> float:
+        t = cut.t - changes["longer"] if inward else cut.t + changes["longer"]
+        if inward and t <= half:
+            return 0.0  # no longer cut: they run into the support
+        return 0.0 if zone_at(designed, side.face, side.span, side.near, t, going) else math.inf
+
+    room = cut.t - half + _STEP if inward else far - cut.t
+    bars = text_of(side.cuts[cut.index].runs)
+    variable = Variable(
+        find.up(0, room, _STEP), f"the {bars} that end here made {{}} mm longer", "or more",
+        f"no greater length of the {bars}",
+    )  # fmt: skip
+    (cure,) = find.cures(use, {"longer": variable})
+    return cure
+
+
+def _closer(design: Design, cut: Cut) -> Cure:
+    """Return the widest stirrups along the span with which the shear at the cut is low."""
+    side, designed = cut.side, design.designed
+    x = local(designed, side.span, side.near, cut.t)
+    M, V = designed.forces.pairs(side.span, x)
+    V_f = float(shear_in_tension(M if side.face == "bottom" else -M, V).max())
+    check = design.stirrups.checks[side.span - 1]
+    place = along(designed, side.span, side.near, cut.t)
+
+    def use(changes: Mapping[str, float]) -> float:
+        s = changes["s"]
+        bands = tuple(replace(b, spacing=min(b.spacing, s)) for b in check.bands)
+        choice = replace(design.stirrups, checks=(SpanCheck(check.state, bands),))
+        other = replace(designed, shear=stretches_of(choice, designed.outline))
+        values = {"V_f": V_f, "V_r": stretch_at(other, place).V_r}
+        return cures_checks.used(clause.CUT_AT_LOW_SHEAR, values)
+
+    widest = max((b.spacing for b in check.bands if math.isfinite(b.spacing)), default=_WIDEST)
+    spaced = find.spacing(widest)
+    variable = replace(spaced, words=f"stirrups at {{}} mm along span {side.span}")
+    (cure,) = find.cures(use, {"s": variable})
+    return cure

@@ -1,0 +1,268 @@
+"""What would close a gap in given bars: a longer bar, a further bar, smaller loads.
+
+Each is tried on the bars along the beam themselves: the cover of the span is computed again.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, replace
+
+import numpy as np
+
+from lineproof.beams.choice import SIZES
+from lineproof.beams.continuous import cures as find
+from lineproof.beams.continuous import cures_checks
+from lineproof.beams.continuous.anchorage import development_length
+from lineproof.beams.continuous.cures import Cure, Utilisation, Variable
+from lineproof.beams.continuous.cures_replay import bound_names
+from lineproof.beams.continuous.cutoff import STEP, ceil50, floor50
+from lineproof.beams.continuous.cutoff_sets import text_of
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.detailing_given import fit
+from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.resistance import provide, stand
+from lineproof.beams.continuous.resistance_cover import (
+    COUNT,
+    ROUND_OFF,
+    Coverage,
+    Gap,
+    covered,
+    ratios,
+    worst_of,
+    yield_force,
+)
+from lineproof.beams.continuous.resistance_demand import NOTHING, SpanDemand, demand_of
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import flexure
+from lineproof.standards.a23_3.bars import BARS
+
+_OWN = re.compile(r"coverage-gap-(\d+)")
+_WORST = re.compile(r"coverage-(bottom|top)(-tension)?")
+_MOST_BARS = 8
+FROM = "from the axis of support 1"
+_LAYERS = (1, 2)
+_MOST_STEEL = 6000.0
+_NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
+Runs = tuple[BarRun, ...]
+
+
+def gap_of(design: Design, check: Entry) -> Gap | None:
+    """Return the gap in the bars along the beam whose worst station a check stands for."""
+    key = check.part.key
+    own, worst = _OWN.fullmatch(key), _WORST.fullmatch(key)
+    if own is None and worst is None:
+        return None
+    found = covered(design.designed, design.runs)
+    if own is not None:
+        return found.gaps[int(own[1]) - 1]
+    assert worst is not None  # one of the two  # noqa: S101
+    return _around(found, "bottom" if worst[1] == "bottom" else "top", tension=bool(worst[2]))
+
+
+def _around(found: Coverage, face: Face, *, tension: bool) -> Gap | None:
+    at = worst_of(found, face, tension=tension)
+    return next((gap for gap in found.gaps if gap.holds(at)), None)
+
+
+def gap_cures(design: Design, gap: Gap) -> list[Cure]:
+    """Return what would close a gap, each verified by covering the span again."""
+    trial = _Trial.of(design, gap)
+    return [*_longer(trial), _further(trial), _smaller(trial)]
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class _Trial:
+    """A gap whose span is covered again with other bars or other loads.
+
+    ``bad`` tells which stations of the span belong to other gaps, which may stay.
+    """
+
+    designed: Designed
+    runs: Runs
+    gap: Gap
+    demand: SpanDemand
+    bad: np.ndarray
+
+    @classmethod
+    def of(cls, design: Design, gap: Gap) -> _Trial:
+        demand = demand_of(design.designed, gap.span, COUNT)
+        now = _ratios(design.designed, design.runs, gap, demand)
+        inside = (demand.x >= gap.start) & (demand.x <= gap.end)
+        bad = (now > 1 + ROUND_OFF) & ~inside
+        return cls(design.designed, design.runs, gap, demand, bad)
+
+    def use(self, runs: Runs) -> float:
+        """Return the largest ratio of the span with other bars, other gaps left aside."""
+        made = _ratios(self.designed, runs, self.gap, self.demand)
+        return float(np.where(self.bad, 0.0, made).max())
+
+    def with_loads(self, part: float) -> float:
+        """Return that with a part of all factored loads."""
+        forces = replace(self.designed.forces, factors=self.designed.forces.factors * part)
+        designed = replace(self.designed, forces=forces)
+        demand = demand_of(designed, self.gap.span, COUNT)
+        made = _ratios(designed, self.runs, self.gap, demand)
+        return float(np.where(self.bad, 0.0, made).max())
+
+
+def _ratios(designed: Designed, runs: Runs, gap: Gap, demand: SpanDemand) -> np.ndarray:
+    spans = np.full(len(demand.x), gap.span)
+    provided = provide(designed, stand(designed, runs), gap.face, demand.x, spans)
+    return ratios(demand.side(gap.face), provided, yield_force(designed))
+
+
+def _longer(trial: _Trial) -> list[Cure]:
+    """Return the cures by longer bars: those that end near a gap, begin near it, or both."""
+    standing = [s for s in stand(trial.designed, trial.runs) if s.run.face == trial.gap.face]
+    gap = trial.gap
+    ends = [s.run.end for s in standing if _near(gap, s.run.end, s.rise_end)]
+    starts = [s.run.start for s in standing if _near(gap, s.run.start, s.rise_start)]
+    middle = (gap.start + gap.end) / 2
+    end = min(ends, key=lambda x: abs(x - middle), default=None)
+    start = min(starts, key=lambda x: abs(x - middle), default=None)
+    runs = [s.run for s in standing]
+    ending = tuple(run for run in runs if run.end == end)
+    starting = tuple(run for run in runs if run.start == start)
+    made = [_moved(trial, ending, ()), _moved(trial, (), starting)]
+    across = [run for run in runs if run.start in starts and run.end in ends]
+    if across and not any(cure and cure.value for cure in made):
+        thickest = max(across, key=lambda run: run.diameter)
+        made = [_moved(trial, (thickest,), (thickest,))]
+    return [cure for cure in made if cure]
+
+
+def _near(gap: Gap, x: float, rise: float) -> bool:
+    """Tell whether an end of bars is so near to a gap that these count less in it."""
+    return gap.start - rise < x < gap.end + rise
+
+
+def _moved(trial: _Trial, ending: Runs, starting: Runs) -> Cure | None:
+    """Return the cure by some bars made longer at their end, others at their start; None for none.
+
+    Bars of both are made longer on both sides by the same.
+    """
+    designed, gap, bars = trial.designed, trial.gap, ending or starting
+    if not bars:
+        return None
+    (low, high), cover = designed.outline.ends, designed.end_cover
+    l_d = max(development_length(designed, run) for run in bars)
+    room = min(
+        gap.end - gap.start + 2 * l_d,
+        *(high - cover - run.end for run in ending),
+        *(run.start - low - cover for run in starting),
+    )
+    if room < STEP:
+        return None
+    others = tuple(run for run in trial.runs if run not in bars)
+
+    def use(changes: Mapping[str, float]) -> float:
+        more = changes["longer"]
+        made = (_grown(run, more * (run in starting), more * (run in ending)) for run in bars)
+        runs = (*others, *made)
+        return trial.use(runs) if fit(runs, designed.basis) else np.inf
+
+    which = f"the {text_of(bars)} that {_place(bars[0], ending, starting)}"
+    both = " at both ends" if ending and starting else ""
+    variable = Variable(
+        find.up(0, room, STEP), f"{which} made {{}} mm longer{both}", "or more",
+        f"no greater length of {which}",
+    )  # fmt: skip
+    (cure,) = find.cures(use, {"longer": variable})
+    return cure
+
+
+def _grown(run: BarRun, before: float, after: float) -> BarRun:
+    return replace(run, start=run.start - before, end=run.end + after)
+
+
+def _place(run: BarRun, ending: Runs, starting: Runs) -> str:
+    """Say where bars end or begin, or both, as the bars along the beam are given."""
+    if ending and starting:
+        return f"stand from {run.start / 1e3:.2f} to {run.end / 1e3:.2f} m {FROM}"
+    if ending:
+        return f"end {run.end / 1e3:.2f} m {FROM}"
+    return f"begin {run.start / 1e3:.2f} m {FROM}"
+
+
+def _further(trial: _Trial) -> Cure:
+    """Return the cure by further bars over a gap: of the size nearby, else of a larger one."""
+    own = [run for run in trial.runs if run.face == trial.gap.face and run.place == "web"]
+    least = max((run.diameter for run in own), default=0.0)
+    sizes = [size for size in SIZES if BARS.number(size, "d_b") >= least] or [SIZES[-1]]
+    made = (_of_size(trial, size) for size in sizes)
+    none = Cure("number", None, "no further bars there that fit into the web")
+    return next((cure for cure in made if cure.value is not None), none)
+
+
+def _of_size(trial: _Trial, size: str) -> Cure:
+    """Return the cure by further bars of a size that are developed on both sides of a gap."""
+    gap, designed = trial.gap, trial.designed
+    bar = BarRun(gap.face, 1, 2, size, gap.start, gap.end)
+    l_d, (low, high) = development_length(designed, bar), designed.outline.ends
+    start = max(floor50(gap.start - l_d), low + designed.end_cover)
+    end = min(ceil50(gap.end + l_d), high - designed.end_cover)
+    bar = replace(bar, start=start, end=end)
+    layers = {n: _layer(trial, replace(bar, number=n)) for n in range(1, _MOST_BARS + 1)}
+
+    def use(changes: Mapping[str, float]) -> float:
+        number = int(changes["number"])
+        if not layers[number]:
+            return np.inf
+        return trial.use((*trial.runs, replace(bar, layer=layers[number], number=number)))
+
+    words = f"further bars {{}}-{size} from {start / 1e3:.2f} to {end / 1e3:.2f} m {FROM}"
+    variable = Variable(tuple(map(float, layers)), words, "or more", "")
+    (cure,) = find.cures(use, {"number": variable})
+    if cure.value is None or layers[int(cure.value)] == 1:
+        return cure
+    return replace(cure, text=f"{cure.text}, in a second layer")
+
+
+def _layer(trial: _Trial, run: BarRun) -> int:
+    """Return the layer in which further bars fit; 0 for none."""
+    basis = trial.designed.basis
+    return next((k for k in _LAYERS if fit((*trial.runs, replace(run, layer=k)), basis)), 0)
+
+
+def _smaller(trial: _Trial) -> Cure:
+    """Return the cure by smaller loads: all of them, in per cent of those factored."""
+    words = "all loads, dead load too, at {} % of what they are"
+    none = "no smaller loads"
+    if trial.gap.at.M_f > NOTHING and trial.gap.at.M_r <= 0:
+        return Cure("loads", None, none)  # no part of a moment is carried by no bars
+    variable = Variable(find.down(100, 5, 5), words, "or less", none)
+
+    def use(changes: Mapping[str, float]) -> float:
+        return trial.with_loads(changes["loads"] / 100)
+
+    (cure,) = find.cures(use, {"loads": variable})
+    return cure
+
+
+def section_gap_cures(check: Entry, value: Callable[[str], float], size: str) -> list[Cure]:
+    """Return the area of bars with which a section without any would carry its moment.
+
+    ``value`` gives what a symbol stands for where the check does not say; ``size`` is that of the
+    bars nearby.
+    """
+    needed = check.part.entries.get("A_sr")
+    if needed is None:
+        return []
+    bound = bound_names(needed)
+    values = {n: bound[n].value if n in bound else value(n) for n in _NAMES}
+    values |= {"h_f": bound["h_f"].value if "h_f" in bound else 0.0, "A_s": 0.0}
+    use: Utilisation = cures_checks.bending(values)
+    variable = replace(
+        find.steel(0.0, size, _MOST_STEEL), words="{} mm² of bars through this section"
+    )
+    return list(find.cures(use, {"A_s": variable}))
+
+
+def without_bars(check: Entry) -> bool:
+    """Tell whether a check is that of a section of flexure in which no bars stand."""
+    area = check.part.entries.get("A_s")
+    kinds = (flexure.STRENGTH, flexure.ENOUGH_STEEL)
+    return check.source in kinds and area is not None and area.value <= 0

@@ -1,0 +1,344 @@
+"""Given bars that leave gaps: printed, failing where they are, with cures that hold.
+
+An existing beam of two spans of 6 m on walls and a column, 400 x 500 mm, 30 MPa, 400R, stirrups
+below the minimum. Bottom bars 4-20M stop at 2.30 m and begin again at 3.00 m; the top bars 3-25M
+over the column reach 0.90 m to each side of its axis, where 2-15M follow. By hand:
+
+    w_D = 24*0.4*0.5 + 3*(4.0 + 1.0) = 19.8 kN/m, w_L = 3*4.8 = 14.4 kN/m
+    w_f = 1.25*19.8 + 1.5*14.4 = 24.75 + 21.6 = 46.35 kN/m
+
+Live load on span 1 (the moment at the column by load on one of two spans is w*l**2/16):
+
+    M_B = -(24.75*6**2/8 + 21.6*6**2/16) = -(111.375 + 48.6) = -159.975 kN.m
+    V_A = 46.35*6/2 - 159.975/6 = 139.05 - 26.6625 = 112.3875 kN
+    largest moment at 112.3875/46.35 = 2.425 m: 112.3875**2/(2*46.35) = 136.26 kN.m
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Sequence
+from typing import Any
+
+import pytest
+
+from lineproof import beams
+from lineproof.beams.continuous.cures_flow import failing
+from lineproof.beams.continuous.resistance_cover import Gap, covered
+from lineproof.record import Record
+from lineproof.record.recompute import recompute
+from lineproof.sheet import Sheet
+
+from .flow import CALLS, close_anyway, run, start
+
+Row = dict[str, Any]
+EXISTING: dict[str, Any] = {
+    "spans": ["6 m", "6 m"],
+    "supports": ["wall 300 mm", "column 400 mm", "wall 300 mm"],
+    "h": "500 mm", "b_w": "400 mm", "h_f": None, "shape": "rectangular", "spacing": "3 m",
+    "f_c": "30 MPa", "superimposed": "1.0 kPa", "floor_weight": "4.0 kPa", "use": "office",
+    "live_load": "4.8 kPa", "stirrups": [], "shear_method": "simplified",
+}  # fmt: skip
+STATIONS = 5700 / 999
+"""Distance of the stations at which the bars are looked at [mm], 1000 between face and axis."""
+ROUND = 1.0
+"""Stations lie on whole mm."""
+
+
+def row(face: str, bars: str, start_at: float, end: float, **more: Any) -> Row:
+    """One run of bars as a designer types it, in m."""
+    return {"face": face, "bars": bars, "start": f"{start_at} m", "end": f"{end} m", **more}
+
+
+LEFT, RIGHT = row("bottom", "4-20M", -0.1, 2.3), row("bottom", "4-20M", 3.0, 12.1)
+OVER = row("top", "3-25M", 5.1, 6.9)
+BESIDE = [row("top", "2-15M", -0.1, 5.1), row("top", "2-15M", 6.9, 12.1)]
+RUNS = [LEFT, RIGHT, OVER, *BESIDE]
+
+# Lengths over which the bars are developed, 12.2.3 without minimum stirrups (the longer
+# expression): 0.6*k1*k2*k3*k4*f_y/sqrt(f_c)*d_b; 20M: k4 = 0.8; top bars: k1 = 1.3.
+L_20 = 0.6 * 0.8 * 400 / math.sqrt(30) * 19.5  # 683.6 mm
+L_25_TOP = 0.6 * 1.3 * 400 / math.sqrt(30) * 25.2  # 1435.5 mm
+STRESS = (0.85 - 0.0015 * 30) * 0.65 * 30  # alpha_1*phi_c*f_c, 15.70 MPa
+D_BOTTOM = 500 - 30 - 11.3 - 19.5 / 2  # 448.95 mm
+D_TOP = 500 - 30 - 11.3 - 25.2 / 2  # 446.1 mm
+COT = 1 / math.tan(math.radians(35))
+
+
+def moment(area: float, d: float) -> float:
+    """M_r of bars in the web [N.mm], by a rectangular block."""
+    force = 0.85 * 400 * area
+    return force * (d - force / (STRESS * 400) / 2)
+
+
+def built(runs: Sequence[Row] = RUNS, **changes: Any) -> tuple[beams.ContinuousBeam, Sheet]:
+    """The existing beam, with all its chapters."""
+    beam = start(**(EXISTING | changes), bar_runs=list(runs))
+    return beam, run(beam)
+
+
+def gaps_of(beam: beams.ContinuousBeam) -> tuple[Gap, ...]:
+    """The gaps in its bars."""
+    return covered(beam.design.designed, beam.design.runs).gaps
+
+
+@pytest.fixture(scope="module")
+def existing() -> tuple[beams.ContinuousBeam, Sheet, Record]:
+    """The beam with gaps, its sheet and its record."""
+    beam, sheet = built()
+    return beam, sheet, sheet.close()
+
+
+Existing = tuple[beams.ContinuousBeam, Sheet, Record]
+
+
+def near(value: float) -> Any:
+    """A place found on the stations."""
+    return pytest.approx(value, abs=STATIONS + ROUND)
+
+
+def test_the_gap_at_midspan_is_where_the_hand_calculation_has_it(existing: Existing) -> None:
+    """The tension there is capped by that of the largest moment alone (11.3.9.4).
+
+    M = 136.26 kN.m needs 0.85*400*A = 321.9 kN: A = 946.7 mm2 of the 1200 mm2; the bars count as
+    946.7/1200 = 0.789 of them 0.789*683.6 = 539.3 mm from their ends.
+    """
+    (gap,) = (g for g in gaps_of(existing[0]) if g.face == "bottom" and 1000 < g.start < 5000)
+    M = 112.3875e3**2 / (2 * 46.35)
+    force = STRESS * 400 * (D_BOTTOM - math.sqrt(D_BOTTOM**2 - 2 * M / (STRESS * 400)))
+    lost = force / (0.85 * 400) / 1200 * L_20
+    assert lost == pytest.approx(539.3, abs=0.1)
+    assert (gap.start, gap.end) == (near(2300 - lost), near(3000 + lost))
+    for x in (2300 - lost, 3000 + lost):  # at both ends the tension with shear is over its cap
+        M_x = 112.3875e3 * x - 46.35 * x * x / 2
+        V_x = abs(112.3875e3 - 46.35 * x)
+        assert M_x / (0.9 * D_BOTTOM) + V_x * COT > force
+    assert gap.worst == math.inf
+    assert gap.at.M_r == 0
+    assert gap.at.M_f == pytest.approx(136.26e6, rel=1e-4)
+    assert gap.at.x == near(2425)
+
+
+def test_no_resistance_is_printed_where_no_bars_stand(existing: Existing) -> None:
+    """Of the section at the middle, of the station at the gap; the shear there has none either."""
+    _, sheet, record = existing
+    for key in ("sag-1/strength", "coverage-bottom/strength"):
+        part, name = key.split("/")
+        M_f, M_r = sheet.entries_of(part)[name].value
+        assert (M_f, M_r) == (pytest.approx(136.26e6, rel=1e-4), 0.0)
+        assert key in record.failed
+    title = (sheet.entries_of("coverage-bottom")["strength"].extra or {})["title"]
+    assert title == "Gap in the bottom bars, span 1, 1.77 to 3.54 m from its left axis"
+    needed = sheet.entries_of("sag-1")["A_sr"].value
+    assert needed == pytest.approx(946.7, abs=0.1)
+    assert recompute(record) == []
+
+
+def test_bars_too_short_count_as_far_as_they_are_developed(existing: Existing) -> None:
+    """At the axis of the column 900 of 1435.5 mm: 0.627*1500 = 940.4 mm2, M_r = 134.5 kN.m.
+
+    Both spans loaded: M_B = -46.35*6**2/8 = -208.6 kN.m, 174.8 kN.m at the face of the column.
+    The section with all its bars would hold: 1500 mm2 give 206.8 kN.m.
+    """
+    beam, _, record = existing
+    over = [g for g in gaps_of(beam) if g.face == "top"]
+    assert [(g.span, g.start if g.span == 2 else g.end) for g in over] == [(1, 6000.0), (2, 6000.0)]
+    rows = record.entries["coverage/stations"]["rows"]
+    (at_face,) = (r for r in rows if r[:2] == ["1", "5.800"])
+    share = 700 / L_25_TOP * 1500  # at the face the bars end 700 mm away
+    assert float(at_face[5]) == pytest.approx(174.8, abs=0.5)
+    assert float(at_face[6]) == pytest.approx(moment(share, D_TOP) / 1e6, abs=0.5)
+    assert moment(900 / L_25_TOP * 1500, D_TOP) == pytest.approx(134.5e6, rel=1e-3)
+    assert moment(1500, D_TOP) > 174.8e6
+    assert "hog-2-left/strength" not in record.failed
+    assert {"coverage-top/strength", "coverage-gap-5/strength"} <= set(record.failed)
+
+
+def test_the_gap_over_the_column_begins_where_the_thin_bars_do_not_carry_the_tension(
+    existing: Existing,
+) -> None:
+    """2-15M, all developed there, carry 0.85*400*400 = 136 kN.
+
+    Live load on span 2: V_A = 24.75*3 - 26.6625 = 47.5875 kN, and with d_v = 0.9*446.1 = 401.5 mm
+    -(47.5875*x - 12.375*x**2)/0.4015 + (24.75*x - 47.5875)*cot(35) = 136 at x = 4.254 m.
+    """
+    (gap,) = (g for g in gaps_of(existing[0]) if g.face == "top" and g.span == 1)
+    a, b = 12.375 / 0.40149, 47.5875 / 0.40149
+    p, q = 24.75 * COT - b, -47.5875 * COT - 136
+    x = (-p + math.sqrt(p * p - 4 * a * q)) / (2 * a)
+    assert x == pytest.approx(4.254, abs=0.001)
+    assert gap.start == near(1000 * x)
+
+
+def test_short_bars_at_the_wall_fail_by_their_tension(existing: Existing) -> None:
+    """At the face of the wall: 16.34/0.404 + (112.39 - 6.95)*cot(35) = 191.0 kN.
+
+    The bars end 250 mm from it: 250/683.6 of 1200 mm2 carry 0.85*400*438.9 = 149.2 kN. Of all
+    loads 149.2/191.0 = 78 % would do.
+    """
+    beam, sheet, _ = existing
+    first = gaps_of(beam)[0]
+    assert (first.span, first.start) == (1, 150.0)
+    F_f, F_r = sheet.entries_of("coverage-gap-1")["bars-tension-side"].value
+    M, V = 112.3875e3 * 150 - 46.35 * 150**2 / 2, 112.3875e3 - 46.35 * 150
+    assert F_f == pytest.approx(M / (0.9 * D_BOTTOM) + V * COT, rel=1e-3)
+    assert F_r == pytest.approx(0.85 * 400 * 1200 * 250 / L_20, rel=1e-3)
+    assert "all loads, dead load too, at 75 % of what they are or less" in cure(
+        sheet, "coverage-gap-1"
+    )
+
+
+def cure(sheet: Sheet, part: str) -> str:
+    """What a part says that would cure its failing checks."""
+    entries = sheet.entries_of(part).values()
+    return " ".join(str(e.source.text) for e in entries if e.symbol.startswith("cure-"))
+
+
+def swapped(old: Row, new: Row) -> list[Row]:
+    """The bars of the beam with one run replaced."""
+    return [new if each is old else each for each in RUNS]
+
+
+@pytest.mark.parametrize(
+    ("part", "words", "good", "bad"),
+    [
+        (
+            "coverage-bottom",
+            "the 4-20M that end 2.30 m from the axis of support 1 made 1450 mm longer",
+            swapped(LEFT, row("bottom", "4-20M", -0.1, 3.75)),
+            swapped(LEFT, row("bottom", "4-20M", -0.1, 3.7)),
+        ),
+        (
+            "coverage-bottom",
+            "further bars 4-20M from 1.05 to 4.25 m from the axis of support 1",
+            [*RUNS, row("bottom", "4-20M", 1.05, 4.25, layer=2)],
+            [*RUNS, row("bottom", "3-20M", 1.05, 4.25, layer=2)],
+        ),
+        (
+            "coverage-top",
+            "6.90 m from the axis of support 1 made 1050 mm longer at both ends",
+            swapped(OVER, row("top", "3-25M", 4.05, 7.95)),
+            swapped(OVER, row("top", "3-25M", 4.10, 7.90)),
+        ),
+        (
+            "coverage-gap-1",
+            "further bars 2-20M from -0.10 to 0.95 m from the axis of support 1",
+            [*RUNS, row("bottom", "2-20M", -0.1, 0.95)],
+            [*RUNS, row("bottom", "1-20M", -0.1, 0.95)],
+        ),
+    ],
+)  # fmt: skip
+def test_cures_close_their_gap_and_less_does_not(
+    existing: Existing, part: str, words: str, good: list[Row], bad: list[Row]
+) -> None:
+    """Each is typed as bars of the beam: with it the gap is gone, with a step less it is not."""
+    beam, sheet, _ = existing
+    assert words in cure(sheet, part)
+    face = "top" if "top" in part else "bottom"
+    start_at = {"coverage-bottom": 1766, "coverage-top": 4255, "coverage-gap-1": 150}[part]
+    was = next(g for g in gaps_of(beam) if g.face == face and abs(g.start - start_at) < 1)
+    for runs, holds in ((good, True), (bad, False)):
+        changed = start(**EXISTING, bar_runs=runs)
+        run(changed, CALLS[: CALLS.index("flexure")])
+        left = [
+            g for g in gaps_of(changed)
+            if (g.face, g.span) == (was.face, was.span) and g.start < was.end and g.end > was.start
+        ]  # fmt: skip
+        assert (not left) is holds
+
+
+def test_a_cracked_section_without_bars_has_no_deflection(existing: Existing) -> None:
+    """Dead load on both spans: 19.8*6**2/16 = 44.55 kN.m at midspan, M_cr is 27.4 kN.m.
+
+    0.5*0.6*sqrt(30)*400*500**2/6 = 27.39 kN.m with half of f_r (9.8.2.3).
+    """
+    _, sheet, record = existing
+    made = sheet.entries_of("deflection-1")
+    M_a, M_cr = made["deflection-whole"].value
+    assert M_a == pytest.approx(44.55e6, rel=1e-9)
+    assert M_cr == pytest.approx(0.3 * math.sqrt(30) * 400 * 500**2 / 6, rel=1e-9)
+    assert "deflection-1/deflection-whole" in record.failed
+    assert "deflection-2/deflection-after-attachment" not in record.failed
+
+
+def test_the_bars_at_the_supports_are_those_that_stand_there(existing: Existing) -> None:
+    """On both sides of a gap the bars run into their support: 4-20M, and none are missing."""
+    _, sheet, record = existing
+    for near_end in ("left", "right"):
+        entries = sheet.entries_of(f"anchorage-bottom-1-{near_end}")
+        assert entries["bars-text"].source.text == "Into the support: 4-20M."
+    assert not any(key.endswith("bars-into-support") for key in record.failed)
+
+
+def test_a_support_without_top_bars_is_not_given_any() -> None:
+    """What does not stand is not chosen: no resistance, no bars in the table of the summary."""
+    beam, sheet = built([row("bottom", "4-20M", -0.1, 12.1), *BESIDE])
+    record = sheet.close()
+    assert beam.design.top.keys() == set()
+    for face in ("hog-2-left", "hog-2-right"):
+        entries = sheet.entries_of(face)
+        assert entries["strength"].value == (pytest.approx(174.8e6, rel=1e-3), 0.0)
+        assert entries["bars-text"].source.text == "Top bars: none."
+        assert f"{face}/strength" in record.failed
+    assert "mm² of bars through this section" in cure(sheet, "hog-2-left")
+    assert recompute(record) == []
+
+
+def test_a_span_without_any_bottom_bars_fails_throughout() -> None:
+    """Bars stand in span 2 alone: span 1 has no resistance, the package is made all the same.
+
+    The tension in the bottom ends where 0.9D + 1.5L on span 1 leaves none: w_f = 39.42 kN/m, V_A =
+    96.795 kN, (96.795*x - 19.71*x**2)/0.404 + (39.42*x - 96.795)*cot(35) = 0 at x = 5.555 m.
+    """
+    _, sheet = built([row("bottom", "4-20M", 6.1, 12.1), OVER, *BESIDE])
+    record = sheet.close()
+    assert {"sag-1/strength", "coverage-bottom/strength"} <= set(record.failed)
+    assert "sag-2/strength" not in record.failed
+    gap = gaps_of_span(sheet, 1)
+    assert gap == "Gap in the bottom bars, span 1, 0.15 to 5.55 m from its left axis"
+
+
+def gaps_of_span(sheet: Sheet, span: int) -> str:
+    """The title of the worst check of the bottom bars."""
+    check = sheet.entries_of("coverage-bottom")["strength"]
+    title = str((check.extra or {})["title"])
+    assert f"span {span}" in title
+    return title
+
+
+def test_the_strain_of_no_bars_is_no_number() -> None:
+    """General method: (M_f/d_v + V_f)/(2*E_s*0.003) of bars are asked for, none are there."""
+    beam, sheet = built(shear_method="general", stirrups=[
+        {"span": k, "spacing": "250 mm"} for k in (1, 2)
+    ])  # fmt: skip
+    parts = [p for p in sheet.parts if "strain-bars" in p.entries]
+    assert parts
+    for part in parts:
+        e = part.entries
+        M_f, V_f, d_v = (e[n].value for n in ("M_f", "V_f", "d_v"))
+        asked, there = e["strain-bars"].value
+        assert asked == pytest.approx((max(M_f, V_f * d_v) / d_v + V_f) / 1200, rel=1e-9)
+        assert there == 0
+        assert "V_r" not in e
+        assert failing(part)
+    assert recompute(close_anyway(sheet)) == []
+    V_r = [s.V_r for s in beam.design.designed.shear if s.start <= 2650 <= s.end]
+    assert set(V_r) == {0.0}  # in the gap the figure of shears shows none
+
+
+def test_a_hogging_midspan_with_bars_developed_in_part() -> None:
+    """Span 2 of 9, 3, 9 m hogs; 5-25M of both sides end 0.30 m past its middle.
+
+    The lap of like bars, 0.60 m, is too short: each counts 300 mm of the lap needed, 1.3*l_d.
+    """
+    over = [row("top", "5-25M", -0.15, 10.8), row("top", "5-25M", 10.2, 20.9)]
+    beam = start(spans=["9 m", "3 m", "9 m"], bar_runs=[row("bottom", "4-25M", -0.15, 20.9), *over])
+    sheet = run(beam, CALLS[:6])
+    made = sheet.entries_of("deflection-2-top")
+    # 620 mm deep, 32 MPa, stirrups at least the minimum: 0.45*1.3*400/sqrt(32)*25.2*1.3
+    lap = 1.3 * 0.45 * 1.3 * 400 / math.sqrt(32) * 25.2
+    assert [made[n].value for n in ("l_av1", "l_av2")] == [300.0, 300.0]
+    assert made["l_d1"].value == pytest.approx(lap, rel=1e-6)
+    assert made["A_s"].value == pytest.approx(2 * 2500 * 300 / lap, rel=1e-6)
+    assert "I_crt" in sheet.entries_of("deflection-2-sections")
+    assert recompute(close_anyway(sheet)) == []
