@@ -23,7 +23,7 @@ from lineproof.record.recompute import recompute
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
 from . import frame_files
-from .flow import MIXED, analysed, close_anyway, record_so_far, start
+from .flow import CALLS, MIXED, analysed, close_anyway, record_so_far, run, start
 
 EQUAL = 1e-9
 ROUNDED = 1e3
@@ -302,6 +302,19 @@ def test_reactions_are_those_of_the_file(own: beams.ContinuousBeam, files: dict[
     ours = own.model.forces.solved.solution.reactions.max(axis=0) / 1e3
     assert [row[0] for row in rows] == ["1", "2", "3", "4"]
     assert [float(row[1]) for row in rows] == pytest.approx(ours.tolist(), abs=0.051)
+
+
+def test_all_calls_run_and_deflections_are_named_as_not_covered(files: dict[str, Any]) -> None:
+    """The cells of a notebook stay as they are; nothing of a deflection is computed or checked."""
+    record = run(start(**files)).close()
+    assert "NOT checked here" in texts(record, "service")
+    assert not any(key.startswith("deflection-") for key in record.entries)
+    missing = [row["check"] for row in record.data["not_covered"]]
+    assert sum(check.startswith("Deflections:") for check in missing) == 1
+    assert list(record.failed) == list(run(start(**files), NO_DEFLECTIONS).close().failed)
+
+
+NO_DEFLECTIONS = tuple(call for call in CALLS if call != "deflections")
 
 
 def test_no_path_of_the_machine_is_recorded(files: dict[str, Any], tmp_path: Path) -> None:

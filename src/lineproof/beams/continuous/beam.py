@@ -16,7 +16,7 @@ from lineproof.beams.continuous.cures_flow import failing, record_cures
 from lineproof.beams.continuous.deflections import (
     SERVICE,
     record_deflections,
-    refuse_deflections,
+    record_not_covered,
 )
 from lineproof.beams.continuous.deliverables import SCHEDULE, record_schedule
 from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
@@ -152,10 +152,12 @@ class ContinuousBeam:
             record_shear(self.design)
 
     def deflections(self) -> None:
-        """Record the deflections of every span."""
-        refuse_deflections(self.inputs)
+        """Record the deflections of every span; with ``forces_csv`` that they are not covered."""
         self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
         with self.sheet.chapter(DEFLECTIONS_CALL, closing=self._cure):
+            if self.inputs.forces_file is not None:
+                record_not_covered(self.sheet)
+                return
             record_deflections(self.design)
 
     def anchorage(self) -> None:

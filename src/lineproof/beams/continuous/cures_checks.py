@@ -13,6 +13,7 @@ from dataclasses import replace
 
 from lineproof.beams.continuous.cures import Utilisation, part_used
 from lineproof.beams.continuous.deflection import (
+    Behind,
     History,
     Place,
     SpanSection,
@@ -153,30 +154,47 @@ def deflecting(
     carries: str,
     history: History | None = None,
     rise: bool = False,
+    behind: tuple[SpanSection, Mapping[Stage, StageMoments]] | None = None,
     f_c: float = 0.0,
     lambda_: float = 1.0,
     gamma_c: float = 2400.0,
 ) -> Utilisation:
     """Return the limited deflection over its limit; h, b_w, A_s, A_sp and f_c may be changed.
 
-    With ``rise`` that by which the span is lifted; its moments must hold that stage.
+    With ``rise`` that by which the span is lifted; its moments must hold that stage. ``behind`` is
+    the span behind a cantilever with its moments: it is changed with it, in depth where both have
+    the same.
 
     ``A_s`` and ``A_sp`` are those at midspan, or at the root of a cantilever; f_c, lambda and the
     density are needed where the concrete may be changed.
     """
+    given = {"f_c": f_c, "lambda_": lambda_, "gamma_c": gamma_c}
 
     def utilisation(changes: Mapping[str, float]) -> float:
-        values = {"f_c": f_c, "lambda_": lambda_, "gamma_c": gamma_c} | dict(changes)
-        made = _resized(section, changes)
-        if "f_c" in changes:
-            normal = values["f_c"] <= _ABOVE_NORMAL_RULE
-            rule = materials.E_C_NORMAL if normal else materials.E_C_GENERAL
-            follow(values, rule, materials.F_R)
-            made = replace(made, E_c=values["E_c"], f_r=values["f_r"])
+        made = _changed_section(section, changes, given)
+        if behind is not None:
+            names = ("h", "b_w", "f_c") if behind[0].h == section.h else ("b_w", "f_c")
+            shared = {name: changes[name] for name in names if name in changes}
+            back = _changed_section(behind[0], shared, given)
+            bent = deflections(back, behind[1], carries=carries, history=history)
+            made = replace(made, behind=Behind.of(back.l, bent))
         found = deflections(made, moments, carries=carries, history=history)
         return found.rise_used if rise else found.sag_used
 
     return utilisation
+
+
+def _changed_section(
+    section: SpanSection, changes: Mapping[str, float], given: Mapping[str, float]
+) -> SpanSection:
+    made = _resized(section, changes)
+    if "f_c" not in changes:
+        return made
+    values = dict(given) | {"f_c": changes["f_c"]}
+    normal = values["f_c"] <= _ABOVE_NORMAL_RULE
+    rule = materials.E_C_NORMAL if normal else materials.E_C_GENERAL
+    follow(values, rule, materials.F_R)
+    return replace(made, E_c=values["E_c"], f_r=values["f_r"])
 
 
 def _resized(section: SpanSection, changes: Mapping[str, float]) -> SpanSection:

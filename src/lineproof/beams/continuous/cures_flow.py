@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import replace
 
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
@@ -18,9 +19,9 @@ from lineproof.beams.continuous.cures_gaps import (
 )
 from lineproof.beams.continuous.cures_replay import bound_names
 from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
-from lineproof.beams.continuous.deflection import Behind, deflections
+from lineproof.beams.continuous.deflection import Behind, SpanSection, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
-from lineproof.beams.continuous.deflection_service import span_behind
+from lineproof.beams.continuous.deflection_service import Stage, StageMoments, span_behind
 from lineproof.beams.continuous.deflections import history_of
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.model import Model
@@ -175,10 +176,12 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     span = int(match[1])
     values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
     try:
-        section, moments = bent_of(model, span, _behind(model, span))
+        before = _behind(model, span)
+        section, moments = bent_of(model, span, _bent_behind(model, before))
         use = cures_checks.deflecting(
             section, moments, carries=model.inputs.carries, history=history_of(model),
-            rise=check.source is stages.RISE_SMALL, **values,
+            rise=check.source is stages.RISE_SMALL,
+            behind=None if before is None else before[1:], **values,
         )  # fmt: skip
         now = use({})
     except UserError:
@@ -186,8 +189,11 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     recorded = utilisation(check)
     if recorded is None or abs(now - recorded) > _SAME * recorded:
         return []
+    depth = find.depth(section.h)
+    if before is not None and before[1].h == section.h:
+        depth = replace(depth, words="a depth of {} mm in this span and the one behind")
     variables = {
-        "h": find.depth(section.h), "b_w": find.width(section.b_w),
+        "h": depth, "b_w": find.width(section.b_w),
         "f_c": find.concrete(values["f_c"]),
     }  # fmt: skip
     sag = next((part for part in model.sheet.parts if part.key == f"sag-{span}"), None)
@@ -196,13 +202,21 @@ def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     return [*steel, *find.cures(use, variables)]
 
 
-def _behind(model: Model, span: int) -> dict[int, Behind]:
-    """Return the span behind a cantilever, bent."""
+def _behind(
+    model: Model, span: int
+) -> tuple[int, SpanSection, Mapping[Stage, StageMoments]] | None:
+    """Return the span behind a cantilever: its number, what bends in it, its moments."""
     if not model.forces.beam.cantilever(span):
-        return {}
+        return None
     number = span_behind(model.forces.beam, span)
-    if number is None:
+    return None if number is None else (number, *bent_of(model, number, {}))
+
+
+def _bent_behind(
+    model: Model, before: tuple[int, SpanSection, Mapping[Stage, StageMoments]] | None
+) -> dict[int, Behind]:
+    if before is None:
         return {}
-    section, moments = bent_of(model, number, {})
+    number, section, moments = before
     made = deflections(section, moments, carries=model.inputs.carries, history=history_of(model))
     return {number: Behind.of(section.l, made)}

@@ -24,12 +24,11 @@ from lineproof.beams.continuous.deflection_service import (
 from lineproof.beams.continuous.deflection_top import hogging_cracks, record_top
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.geometry import span_place
-from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model, SingleLoad
 from lineproof.beams.continuous.service import record_construction, service_lines
 from lineproof.beams.steps import Steps
-from lineproof.errors import UserError
 from lineproof.record import Entry
+from lineproof.sheet import Sheet
 
 SERVICE = "service"
 _CONSTRUCTION = (
@@ -37,16 +36,19 @@ _CONSTRUCTION = (
     "construction load act on all spans. The largest moment reached so far cracks the section for "
     "all later stages. The full dead load is taken, superimposed load included."
 )
+_NOT_COVERED = (
+    "The moments are those of a frame analysis, of factored cases. Deflections need the moments of "
+    "every load type and the loads of every span, which such a file does not give: they are NOT "
+    "checked here, and the cover lists them. Take them from the frame analysis, with cracked "
+    "sections and long-term parts."
+)
 _SPAN = ("l", "l_n", "h", "I_g", "y_b")
 
 
-def refuse_deflections(inputs: ContinuousInputs) -> None:
-    """Refuse deflections of moments that were brought in: they need the load types apart."""
-    if inputs.forces_file is not None:
-        raise UserError(
-            "forces_csv: deflections need the moments by load type, which a frame analysis does "
-            "not give; leave beam.deflections() out, the package lists them as not covered"
-        )
+def record_not_covered(sheet: Sheet) -> None:
+    """Record that deflections of moments that were brought in are no part of the calculation."""
+    with sheet.part(SERVICE, "Deflections: not covered"):
+        sheet.note("not-covered", _NOT_COVERED, title="Deflections", clause="9.8")
 
 
 def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
