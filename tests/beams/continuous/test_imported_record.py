@@ -309,7 +309,7 @@ def test_all_calls_run_and_deflections_are_named_as_not_covered(files: dict[str,
     record = run(start(**files)).close()
     assert "NOT checked here" in texts(record, "service")
     assert not any(key.startswith("deflection-") for key in record.entries)
-    missing = [row["check"] for row in record.data["not_covered"]]
+    missing = [row["check"] for row in record.data["status"]["not_covered"]]
     assert sum(check.startswith("Deflections:") for check in missing) == 1
     assert list(record.failed) == list(run(start(**files), NO_DEFLECTIONS).close().failed)
 

@@ -217,19 +217,21 @@ def _gaps(
 
 
 def _worst_in(side: Side, ratio: Floats, a: int, b: int) -> int:
-    """Return the worst station of a stretch: of several without bars, that of the most moment."""
-    part = ratio[a : b + 1]
-    tied = np.flatnonzero(part == part.max()) + a
-    return int(tied[side.M[tied].argmax()])
+    """Return the worst station of a stretch: of those without bars, that of the largest moment."""
+    worst = int(ratio[a : b + 1].argmax()) + a
+    if np.isfinite(ratio[worst]):
+        return worst
+    none = np.flatnonzero(np.isinf(ratio[a : b + 1])) + a
+    return int(none[side.M[none].argmax()])
 
 
 def worst_of(found: Coverage, face: Face, *, tension: bool) -> Station:
     """Return the station that the moment of a face uses most, or its tension with shear."""
 
     def ratio(station: Station) -> tuple[float, float]:
-        if tension:
-            return ratio_of(station.F, station.F_r), station.F
-        return ratio_of(station.M_f, station.M_r), station.M_f
+        pair = (station.F, station.F_r) if tension else (station.M_f, station.M_r)
+        used = ratio_of(*pair)
+        return used, pair[0] if used == np.inf else 0.0  # of those without bars, the most is asked
 
     stations = found.by_tension if tension else found.by_moment
     return max((s for s in stations if s.face == face), key=ratio)
