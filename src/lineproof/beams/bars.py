@@ -42,6 +42,11 @@ def in_line(first: int, second: int) -> bool:
     return second <= first and (second % 2 == 0 or first % 2 == 1)
 
 
+def spaced(number: int) -> int:
+    """Return the number of bars whose clear distance counts: that of one bar is as of two."""
+    return max(number, 2)
+
+
 BarLayers = tuple[BarLayer, ...]
 """Layers from the tension face inward."""
 

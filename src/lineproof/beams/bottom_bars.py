@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.bars import BarLayers, bars_text
+from lineproof.beams.bars import BarLayers, bars_text, spaced
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -33,13 +33,20 @@ def bars_inside(sheet: Sheet, layers: BarLayers, *, stirrup: str, origin: str) -
     A_b = sheet.lookup("A_b", bars.BARS, first.size)
     n_1 = sheet.given("n_1", str(first.number), source=origin)
     s_min = sheet.line(bars.LEAST_CLEAR)
-    s_c = sheet.line(bars.CLEAR, n_b=n_1)
+    s_c = sheet.line(bars.CLEAR, n_b=for_distance(sheet, "n_b", first.number, n_1))
     sheet.check(bars.FITS)
     A_s1 = sheet.line(bars.AREA_OF_BARS, symbol="A_s1" if len(layers) > 1 else "", n_b=n_1)
     if len(layers) == 1:
         return sheet.line(bars.DEPTH_ONE_LAYER)
     d_1 = sheet.line(bars.DEPTH_FIRST)
     return _record_second_layer(sheet, layers, origin, (d_b, A_b, s_min, s_c, A_s1, d_1))
+
+
+def for_distance(sheet: Sheet, symbol: str, number: int, given: Entry) -> Entry:
+    """Return the number of bars that their clear distance rests on; one bar stands as of two."""
+    if spaced(number) == number:
+        return given
+    return sheet.given(symbol, str(spaced(number)), source="one bar: distance as of two")
 
 
 def _record_second_layer(
@@ -51,7 +58,8 @@ def _record_second_layer(
     n_2 = sheet.given("n_2", str(second.number), source=origin)
     thicker = d_b2 if second.diameter > layers[0].diameter else first[0]
     least = sheet.line(bars.LEAST_CLEAR, symbol="s_min2", d_b=d_b2)
-    clear = sheet.line(bars.CLEAR, symbol="s_c2", n_b=n_2, d_b=d_b2)
+    n_b = for_distance(sheet, "n_b2", second.number, n_2)
+    clear = sheet.line(bars.CLEAR, symbol="s_c2", n_b=n_b, d_b=d_b2)
     sheet.check(bars.FITS_SECOND, s_min2=least, s_c2=clear)
     sheet.line(bars.LAYER_DISTANCE, d_b=thicker)
     sheet.line(bars.DEPTH_SECOND)

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from functools import lru_cache
 from typing import Any, Literal
 
+from lineproof.beams.bars import spaced
 from lineproof.beams.continuous import numbers
 from lineproof.beams.continuous.detailing_data import Basis, Designed
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
@@ -146,7 +147,10 @@ def _general(basis: Basis, bar: Bar, s_c: float, d_bs: float, common: dict[str, 
 
 
 def bar_of(designed: Designed, run: BarRun) -> Bar:
-    """Return what the development of a run rests on: the fullest layer, the deepest concrete."""
+    """Return what the development of a run rests on: the fullest layer, the deepest concrete.
+
+    A bar alone in its layer is taken as one of two.
+    """
     axes = designed.outline.axes
     first, last = bisect_right(axes, run.start), bisect_left(axes, run.end)
     spans = list(range(max(first, 1), min(last, len(axes) - 1) + 1))
@@ -156,7 +160,7 @@ def bar_of(designed: Designed, run: BarRun) -> Bar:
         return Bar(run.face, "overhang", 1, run.size, run.number, h, room_beside(designed, spans))
     layers = _layers_met(designed, run, spans)
     beside = [layer[run.layer - 1].number for layer in layers if len(layer) >= run.layer]
-    return Bar(run.face, "web", run.layer, run.size, max([run.number, *beside]), h)
+    return Bar(run.face, "web", run.layer, run.size, spaced(max([run.number, *beside])), h)
 
 
 def development_length(designed: Designed, run: BarRun) -> float:

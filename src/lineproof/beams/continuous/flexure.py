@@ -6,7 +6,7 @@ from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass
 
 from lineproof.beams.bars import BarLayer, BarLayers
-from lineproof.beams.bottom_bars import bars_inside
+from lineproof.beams.bottom_bars import bars_inside, for_distance
 from lineproof.beams.choice import bars_for
 from lineproof.beams.continuous.bar_choice import (
     Chosen,
@@ -448,7 +448,7 @@ def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> No
         "A_b": sheet.lookup("A_b", bars.BARS, top.web.size),
         "n_t": sheet.given("n_t", str(top.web.number), source=origin),
     }
-    entries["n_b"] = entries["n_t"]
+    entries["n_b"] = for_distance(sheet, "n_b", top.web.number, entries["n_t"])
     if inputs.slab:
         entries["n_o"] = sheet.given("n_o", str(top.overhang), source=origin)
     steps.bind(**entries)

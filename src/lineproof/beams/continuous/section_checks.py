@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers, spaced
 from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation, value
 from lineproof.beams.inputs import Shape
 from lineproof.formula import Formula
@@ -54,7 +54,8 @@ def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
     """Put bottom bars into the numbers: areas and depths; return whether they fit."""
     first = layers[0]
     _put_layer(at, first, stirrup)
-    put(at, bars.LEAST_CLEAR, bars.CLEAR)
+    put(at, bars.LEAST_CLEAR)
+    at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(first.number))})
     made = {bars.FITS.key: utilisation(bars.FITS, at)}
     if len(layers) == 1:
         put(at, bars.AREA_OF_BARS, bars.DEPTH_ONE_LAYER)
@@ -63,7 +64,7 @@ def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
     at["A_s1"] = value(bars.AREA_OF_BARS, at)
     put(at, bars.DEPTH_FIRST)
     at["d_b2"] = second.diameter
-    upper = at | {"d_b": second.diameter, "n_b": float(second.number)}
+    upper = at | {"d_b": second.diameter, "n_b": float(spaced(second.number))}
     at["s_min2"] = value(bars.LEAST_CLEAR, upper)
     at["s_c2"] = value(bars.CLEAR, upper)
     at["s_l"] = value(bars.LAYER_DISTANCE, at | {"d_b": max(first.diameter, second.diameter)})
@@ -76,7 +77,8 @@ def put_top(at: Numbers, shape: Shape, web: BarLayer, overhang: int, stirrup: st
     """Put top bars into the numbers: those within the web and ``overhang`` in each overhang."""
     _put_layer(at, web, stirrup)
     at["n_t"], at["n_o"] = float(web.number), float(overhang)
-    put(at, bars.LEAST_CLEAR, bars.CLEAR, SPREAD_AREAS[shape], bars.DEPTH_ONE_LAYER)
+    at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(web.number))})
+    put(at, bars.LEAST_CLEAR, SPREAD_AREAS[shape], bars.DEPTH_ONE_LAYER)
     made = {bars.FITS.key: utilisation(bars.FITS, at)}
     if shape != "rectangular":
         put(at, minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)

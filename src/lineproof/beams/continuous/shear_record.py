@@ -191,6 +191,9 @@ def _record_change(steps: Steps, section: ShearSection) -> None:
 def _record_other(steps: Steps, basis: ShearBasis) -> None:
     """Record for information what the other method gives, with symbols of its own."""
     if basis.method == "simplified":
+        if steps.entry("A_s").value == 0:
+            _note_other(steps, "The general method does not apply: no bars count in tension here.")
+            return
         names = {"eps_x": "eps_xg", "beta": "beta_g", "theta": "theta_g"}
         made = {"eps_x": steps.line(shear.EPS_X, symbol=names["eps_x"])}
         if made["eps_x"].value > 0.003:  # noqa: PLR2004 - 11.3.6.4
