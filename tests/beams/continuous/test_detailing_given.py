@@ -103,7 +103,13 @@ def test_two_sizes_in_one_layer_are_refused() -> None:
 
 
 def test_where_no_bars_stand_at_midspan_the_nearest_are_known() -> None:
-    """2-25M end at 3 m and 2-20M begin at 4.2 m, the middle is at 3.5 m: the 25M are nearer."""
+    """2-25M end at 3 m and 2-20M begin at 4.2 m, the middle is at 3.5 m: the 25M are nearer.
+
+    Also where the 20M are short, so that the middle of the 25M is further away.
+    """
+    short = row(bars="2-20M", start="4.2 m", end="5 m")
+    runs = read_given_runs([row(end="3 m"), short], BASIS, PAIR)
+    assert beside_gap(runs, BASIS.outline, 1) == (BarLayer(2, "25M"),)
     runs = read_given_runs([row(end="3 m"), row(bars="2-20M", start="4.2 m")], BASIS, PAIR)
     assert section_bars_of(runs, BASIS.outline, "15M").bottom == ((),)
     assert beside_gap(runs, BASIS.outline, 1) == (BarLayer(2, "25M"),)

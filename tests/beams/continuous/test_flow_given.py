@@ -79,6 +79,12 @@ def test_bars_given_are_not_changed() -> None:
     assert not any(key.startswith("sag-1") for key in beam.sheet.close().failed)
 
 
+def test_the_thicker_bars_may_lie_in_the_second_layer() -> None:
+    """3-20M below 2-25M: 900 + 1000 mm2, by the larger bar 1900/500 = 3.8 bars (10.6.1)."""
+    sheet = run(start(bottom_bars=["3-20M / 2-25M", None, None]), CALLS[:4])
+    assert sheet.entry("sag-1/n_z").value == pytest.approx(3.8)
+
+
 def test_runs_given_stay_as_they_are() -> None:
     beam = start(bar_runs=[BOTTOM, TOP])
     run(beam)

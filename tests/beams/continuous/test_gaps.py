@@ -131,6 +131,9 @@ def test_no_resistance_is_printed_where_no_bars_stand(existing: Existing) -> Non
     assert title == "Gap in the bottom bars, span 1, 1.77 to 3.54 m from its left axis"
     needed = sheet.entries_of("sag-1")["A_sr"].value
     assert needed == pytest.approx(946.7, abs=0.1)
+    rows = record.entries["summary/service"]["rows"]
+    (whole,) = (r for r in rows if "without bars" in r[1])
+    assert whole[2:4] == ["44.6 kN·m", "27.4 kN·m"]  # 19.8*6**2/16 against 0.3*sqrt(30)*b*h**2/6
     assert recompute(record) == []
 
 

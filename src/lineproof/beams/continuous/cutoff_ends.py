@@ -123,8 +123,8 @@ def _bottom_bars(designed: Designed, runs: Runs, span: int, near: End) -> Runs:
     own = tuple(run for run in runs if _belongs(designed, run, span))
     low, high = (start, at) if near == "left" else (at, end)
     ends = {low, high, *(x for r in own for x in (r.start, r.end) if low < x < high)}
-    places = [(a + b) / 2 for a, b in pairwise(sorted(ends))]
-    found = (at_section(own, "bottom", x) for x in sorted(places, key=lambda x: abs(x - at)))
+    stretches = sorted(pairwise(sorted(ends)), reverse=near == "left")  # the nearest first
+    found = (at_section(own, "bottom", (a + b) / 2) for a, b in stretches)
     return next((met for met in found if met), ())
 
 

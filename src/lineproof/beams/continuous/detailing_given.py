@@ -147,8 +147,13 @@ def _at_end(outline: BeamOutline, key: str, x: float) -> bool:
 
 def _places(runs: Iterable[BarRun], outline: BeamOutline) -> list[float]:
     """Return places between all ends of bars, where what stands there can be counted."""
+    return [(a + b) / 2 for a, b in _stretches(runs, outline)]
+
+
+def _stretches(runs: Iterable[BarRun], outline: BeamOutline) -> list[tuple[float, float]]:
+    """Return the stretches between all ends of bars."""
     ends = sorted({outline.ends[0], outline.ends[1], *(x for r in runs for x in (r.start, r.end))})
-    return [(a + b) / 2 for a, b in pairwise(ends)]
+    return list(pairwise(ends))
 
 
 def fit(runs: tuple[BarRun, ...], basis: Basis) -> bool:
@@ -245,9 +250,9 @@ def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int) -> BarLa
     kept = tuple(runs)
     start, end = outline.faces(span)
     middle = (start + end) / 2
-    places = [x for x in _places(kept, outline) if start < x < end]
-    for x in sorted(places, key=lambda x: abs(x - middle)):
-        layers = _web_at(kept, "bottom", x, f"span {span}", FaultList())
+    stretches = [(a, b) for a, b in _stretches(kept, outline) if b > start and a < end]
+    for a, b in sorted(stretches, key=lambda each: max(each[0] - middle, middle - each[1])):
+        layers = _web_at(kept, "bottom", (a + b) / 2, f"span {span}", FaultList())
         if layers:
             return layers
     return ()

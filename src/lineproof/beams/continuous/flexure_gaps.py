@@ -27,8 +27,8 @@ from lineproof.standards.a23_3 import bars, flexure
 from lineproof.standards.references import MECHANICS
 
 NO_BARS = (
-    "No {face} bars stand here, as given along the beam. The resistance of the concrete in tension "
-    "is not counted: M_r = 0."
+    "No {face} bars stand here, as given along the beam. The tension that plain concrete takes is "
+    "not counted: there is no moment resistance."
 )
 NEAREST = "the nearest to the middle of the span, where none stand"
 ASSUMED = "none stand in this span: assumed for the depth alone"

@@ -21,7 +21,7 @@ from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit, utilisation
-from lineproof.standards.a23_3 import crack_control, flexure, minimum, shear
+from lineproof.standards.a23_3 import crack_control, deflection_stages, flexure, minimum, shear
 
 FLEXURE = ["Place", "Load case", "M_f, kN.m", "A_sr, mm2", "Bars", "A_s, mm2", "M_r, kN.m", "Ratio"]
 FLEXURE_WIDTHS = (24.0, 44.0, 14.0, 14.0, 36.0, 14.0, 14.0, 0.0)
@@ -166,7 +166,8 @@ def service_rows(model: Model) -> Iterator[Row]:
         part = parts.get(f"deflection-{span}")
         for key, entry in (part.entries if part is not None else {}).items():
             if entry.kind == "check" and key.startswith("deflection"):
-                yield _check_row(f"span {span}", entry, "mm")
+                whole = entry.source in (deflection_stages.WHOLE, deflection_stages.WHOLE_TOP)
+                yield _check_row(f"span {span}", entry, "kN.m" if whole else "mm")
 
 
 def _checks(place: str, entries: Mapping[str, Entry]) -> Iterator[Row]:
