@@ -38,8 +38,10 @@ def cracks_inside(
     """Record z inside the open part, with the concrete in tension by ``area``."""
     largest = max(layers, key=lambda layer: layer.diameter)
     if largest is not layers[0]:
-        known = steps.sheet.part_entries.get("A_b2")
-        steps.bind(A_b=known or steps.sheet.lookup("A_b", bars.BARS, largest.size))
+        A_b = steps.sheet.part_entries.get("A_b2")  # recorded with the bars, if in this part
+        if A_b is None:
+            A_b = steps.sheet.lookup("A_b", bars.BARS, largest.size)
+        steps.bind(A_b=A_b)
     steps.lines(clause.STRESS_ALLOWANCE, clause.D_C, clause.D_S, clause.BAR_COUNT, area, clause.Z)
     steps.sheet.lookup("z_max", clause.LIMITS, exposure_kind(exposure))
     steps.check(clause.CRACKS)
