@@ -128,6 +128,39 @@ def test_a_strain_out_of_range_fails_on_its_own() -> None:
     assert missing_checks(bare) == ()
 
 
+@pytest.fixture(scope="module")
+def gaps() -> Record:
+    """No bottom bars at the middle of span 1, no top bars over support 2."""
+    runs = [
+        {"face": "bottom", "bars": "4-25M", "start": "-0.15 m", "end": "3.5 m"},
+        {"face": "bottom", "bars": "4-25M", "start": "4.2 m", "end": "24.55 m"},
+        {"face": "top", "bars": "2-25M", "start": "-0.15 m", "end": "6 m"},
+        {"face": "top", "bars": "4-25M", "start": "9.5 m", "end": "24.55 m"},
+    ]
+    return record_of(bar_runs=runs, slab_bars="2 x 10M at 300 mm")
+
+
+def test_where_no_bars_stand_the_failing_check_is_enough(gaps: Record) -> None:
+    assert {"sag-1/strength", "hog-2-left/strength", "shear-1-right/strain-bars"} <= set(
+        gaps.failed
+    )
+    assert missing_checks(gaps) == ()
+
+
+@pytest.mark.parametrize(
+    ("taken", "sentence"),
+    [
+        ("sag-2/crack-control",
+         "Crack control is checked for span 3 only, not for span 2."),
+        ("hog-2-left/(strength|steel-for-moment)",
+         "Moment resistance is checked at 5 places, not for support 2, left face."),
+        ("cover/cover-.*", "Cover of the stirrup for durability is not checked."),
+    ],
+)  # fmt: skip
+def test_beside_a_gap_what_is_taken_away_is_named(gaps: Record, taken: str, sentence: str) -> None:
+    assert sentence in sentences(without_entries(gaps, taken))
+
+
 def test_what_the_record_lists_as_not_covered_is_not_missed() -> None:
     bare = without_parts(demo("floor-beam"), "deflection-.*")
 

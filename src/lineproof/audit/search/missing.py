@@ -129,7 +129,8 @@ def missing_checks(record: Record) -> tuple[Finding, ...]:
     """Return what a complete calc of this kind of member would hold and this one does not.
 
     A check that the record lists as not covered is not missed; nor is one at a place that needs
-    none. A record that is no design of a member, such as a study of a section, misses nothing.
+    none, or where another fails for want of bars. A record that is no design of a member, such as
+    a study of a section, misses nothing.
     """
     member = member_of(record)
     if not member.flow or not _is_design(record):
@@ -152,7 +153,12 @@ def _is_design(record: Record) -> bool:
 
 def _missed(row: Expected, spots: Sequence[Spot]) -> Iterator[Finding]:
     """Give the finding of a check that is not made at every spot where it belongs."""
-    made = {spot.name: spot.made(row.tests) for spot in spots}
+    everywhere = row.where in (Where.BEAM, Where.SLAB)
+    made = {
+        spot.name: ids
+        for spot in spots
+        if (ids := spot.made(row.tests)) or everywhere or not spot.stopped
+    }
     without = [name for name, ids in made.items() if not ids]
     if not without:
         return

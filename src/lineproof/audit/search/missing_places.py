@@ -12,9 +12,18 @@ from lineproof.audit.search.member import Member
 from lineproof.formula import Criterion
 from lineproof.record import Record
 from lineproof.record.entry import CHECK, DECISION
-from lineproof.standards.a23_3 import shear
+from lineproof.standards.a23_3 import deflection_stages, shear
 
 _NUMBERED = re.compile(r"-\d+$")
+_STOPS = {
+    test.key
+    for test in (
+        shear.STRAIN_IN_RANGE, shear.BARS_IN_RANGE, deflection_stages.WHOLE,
+        deflection_stages.WHOLE_TOP,
+    )
+}  # fmt: skip
+_NO_BARS = ("no-bars", "none-going-on")
+"""Notes of parts in which no bars stand, or none go on."""
 
 
 class Where(StrEnum):
@@ -50,6 +59,14 @@ class Spot:
     name: str
     parts: tuple[Mapping[str, Any], ...]
 
+    @property
+    def stopped(self) -> bool:
+        """Whether a check fails here that leaves no others to be made: no bars, strain too large.
+
+        A note that there are no bars says so only beside a check that fails.
+        """
+        return any(_stops(part) for part in self.parts)
+
     def made(self, tests: Sequence[Criterion]) -> list[str]:
         """Return the ids of what makes one of these tests here: checks, and decisions that hold."""
         keys, texts = {test.key for test in tests}, {test.text for test in tests}
@@ -60,6 +77,12 @@ class Spot:
             if (entry["kind"] == CHECK or (entry["kind"] == DECISION and entry["holds"]))
             and (_NUMBERED.sub("", entry["symbol"]) in keys or entry["formula"] in texts)
         ]
+
+
+def _stops(part: Mapping[str, Any]) -> bool:
+    failed = {e["symbol"] for e in part["entries"] if e["kind"] == CHECK and not e["holds"]}
+    told = any(entry["symbol"] in _NO_BARS for entry in part["entries"])
+    return bool(failed & _STOPS) or (told and bool(failed))
 
 
 class Calc:
@@ -120,8 +143,9 @@ def _deep_spans(calc: Calc) -> Iterator[Spot]:
 
 def _flanges(calc: Calc) -> Iterator[Spot]:
     if calc.value("h_f"):
-        for k in calc.member.sagging():
-            yield Spot(f"span {k}", calc.under(f"interface-{k}"))
+        for spot in _spans(calc):
+            if not spot.stopped:
+                yield Spot(spot.name, calc.under(f"interface-{spot.name.removeprefix('span ')}"))
 
 
 def _overhangs(calc: Calc) -> Iterator[Spot]:
@@ -141,9 +165,7 @@ def _supports(calc: Calc) -> Iterator[Spot]:
 
 def _ends(calc: Calc) -> Iterator[Spot]:
     for span, side in calc.member.ends():
-        parts = calc.under(rf"shear-{span}-{side}(-\d+)?")
-        if not any(calc.holds(part, "strain-range") is False for part in parts):
-            yield Spot(f"span {span} at its {side} support", parts)
+        yield Spot(f"span {span} at its {side} support", calc.under(rf"shear-{span}-{side}(-\d+)?"))
 
 
 def _torsion(calc: Calc) -> Iterator[Spot]:
@@ -224,7 +246,8 @@ def _exterior_faces(calc: Calc) -> Iterator[Spot]:
 def _top_ends(calc: Calc) -> Iterator[Spot]:
     for support, side in calc.moment_faces():
         parts = calc.under(f"anchorage-top-{support}-{side}(-.*)?")
-        if not any(calc.has(part, "through", "holders") for part in parts):
+        bare = any(_stops(part) for part in calc.under(f"hog-{support}-{side}"))
+        if not bare and not any(calc.has(part, "through", "holders") for part in parts):
             yield Spot(f"support {support}, {side} face", parts)
 
 
