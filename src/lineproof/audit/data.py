@@ -37,6 +37,16 @@ class Interval:
         slack = 1e-9 * max(abs(self.low), abs(self.high))
         return self.low - slack <= other.high and other.low <= self.high + slack
 
+    def overlaps(self, other: Interval) -> bool:
+        """Tell whether two intervals have more than an end in common; a number has only itself.
+
+        >>> read_from("111").overlaps(read_from("112")), read_from("111").meets(read_from("112"))
+        (False, True)
+        """
+        slack = 1e-9 * max(abs(self.low), abs(self.high))
+        shared = min(self.high, other.high) - max(self.low, other.low)
+        return self.meets(other) and (shared > slack or min(self.half, other.half) <= slack)
+
     def times(self, factor: float) -> Interval:
         """Return the interval of numbers times a factor."""
         ends = (self.low * factor, self.high * factor)

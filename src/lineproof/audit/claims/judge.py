@@ -9,8 +9,8 @@ from itertools import chain
 
 from lineproof.audit.claims.other_methods import Bench, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
-from lineproof.audit.claims.readings import Rounded, coarse_rounding, unit_slip
-from lineproof.audit.claims.safe_side import is_safe
+from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
+from lineproof.audit.claims.safe_side import errs_safely
 from lineproof.audit.claims.twins import twins_of
 from lineproof.audit.claims.worlds import Worlds, unmoved_lines
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
@@ -56,7 +56,7 @@ class _Judge:
         worlds = [self.worlds.claimed]
         if self.worlds.sound is not self.worlds.claimed:
             worlds.append(self.worlds.sound)
-        self.benches = [Bench(self.worker, w, frozenset(self.claims)) for w in worlds]
+        self.benches = [Bench(self.worker, w, self.claims) for w in worlds]
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
         self.verdicts: dict[str, Verdict] = {}
@@ -184,9 +184,10 @@ class _Judge:
         other = self._other_way(node, claim)
         if other is not None:
             return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
-        rounded = coarse_rounding(claim, around)
-        if rounded is not None:
-            return self._rounded(node, claim, made, rounded)
+        for rounded in coarse_roundings(claim, node.symbol, around):
+            safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
+            if rounded.usual or safe:
+                return self._rounded(node, claim, made, rounded, safe=safe is not False)
         turned = self.turned.get(node.part)
         if turned:
             note = f"{self._turns(turned[-1])}, so that other expressions apply to this line"
@@ -196,7 +197,7 @@ class _Judge:
     def _other_way(self, node: Node, claim: Claim) -> str | None:
         """Return the sentence of the other valid way that gives a claim, if one does."""
         ways = chain.from_iterable(other_ways(bench, node) for bench in self.benches)
-        met = (way.sentence for way in ways if claim.stands_for.meets(way.interval))
+        met = (way.sentence for way in ways if claim.stands_for.overlaps(way.interval))
         return next(met, None)
 
     def _turns(self, decision: str) -> str:
@@ -205,11 +206,13 @@ class _Judge:
         state = "no longer holds" if node.entry["holds"] else "holds"
         return f"with the values claimed {formula} ({node.label}) {state}"
 
-    def _rounded(self, node: Node, claim: Claim, made: Judged, rounded: Rounded) -> Judged:
+    def _rounded(
+        self, node: Node, claim: Claim, made: Judged, rounded: Rounded, *, safe: bool
+    ) -> Judged:
         way = "up" if rounded.up else "down"
         shown = self._shown(node, rounded.of, _DIGITS + 1)
         note = f"{shown} rounded {way} to a step of {rounded.step} {claim.unit}".rstrip()
-        if is_safe(self.graph, node.id, claim.value, rounded.of):
+        if safe:
             return replace(made, verdict=Verdict.SAFE_ROUNDING, note=f"{note}: conservative")
         return replace(
             made, verdict=Verdict.UNSAFE_ROUNDING, note=f"{note}: not conservative",

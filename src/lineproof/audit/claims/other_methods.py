@@ -6,12 +6,12 @@ the interval that follows by it from the values that the claim itself uses.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass
 
 from lineproof.audit.claims.coefficient_moments import by_coefficients
 from lineproof.audit.claims.propagate import Form, Worker, World, combined
-from lineproof.audit.data import Interval
+from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph, Node
 from lineproof.formula import names_of, parse_line
 from lineproof.formula.compiled import compile_tree
@@ -41,19 +41,25 @@ _ROUNDING = 1e-9
 
 @dataclass(frozen=True, slots=True)
 class Other:
-    """What another way gives, and the sentence that names it."""
+    """What another way gives, and the sentence that names it.
+
+    ``replaced`` are the ids of the lines that it works otherwise, ``took`` of those whose values
+    it uses in their place.
+    """
 
     sentence: str
     interval: Interval
+    replaced: tuple[str, ...] = ()
+    took: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
 class Bench:
-    """What the ways work with: the graph, its functions, the world as claimed, the claimed ids."""
+    """What the ways work with: the graph, its functions, a world of values, and the claims."""
 
     worker: Worker
     world: World
-    claimed: frozenset[str]
+    claims: Mapping[str, Claim]
 
     @property
     def graph(self) -> Graph:
@@ -66,11 +72,26 @@ class Bench:
             return swapped[node.id]
         made = dict(self.world.used) | dict(swapped)
         moved = set(self.graph.below(swapped))
-        between = (moved & set(self.graph.above([node.id]))) - self.claimed - set(swapped)
+        between = (moved & set(self.graph.above([node.id]))) - set(self.claims) - set(swapped)
         for entry_id in self.graph.nodes:
             if entry_id in between and self.graph[entry_id].is_computed:
                 made[entry_id] = self.worker.form(self.graph[entry_id], made)
         return self.worker.form(node, made)
+
+    def by(
+        self, node: Node, swapped: Mapping[str, Form], sentence: str, took: Iterable[str] = ()
+    ) -> Iterator[Other]:
+        """Give a line worked with other forms of some that it rests on, as another way.
+
+        A way is taken as a whole: where a line that it works otherwise is claimed with the value
+        of the recorded way, what rests on it was not worked by the other.
+        """
+        above = set(self.graph.above([node.id]))
+        for entry_id in above.intersection(swapped):
+            claim = self.claims.get(entry_id)
+            if claim is not None and not claim.stands_for.overlaps(swapped[entry_id].interval):
+                return
+        yield Other(sentence, self.reworked(node, swapped).interval, tuple(swapped), tuple(took))
 
     def beside(self, node: Node, symbol: str) -> Form | None:
         """Return the form of a symbol in the part of a line, if it stands there."""
@@ -101,17 +122,17 @@ def other_ways(bench: Bench, node: Node) -> Iterator[Other]:
 
 
 def _shear(bench: Bench, node: Node) -> Iterator[Other]:
-    swapped = _recorded_pairs(bench, node) or _simplified(bench, node)
+    pairs = _recorded_pairs(bench, node)
+    swapped = {mine: bench.world.used[other] for mine, other in pairs.items()}
+    swapped = swapped or _simplified(bench, node)
     if not swapped:
         return
     part = bench.graph[next(iter(swapped))].part
     factor = bench.graph.nodes.get(f"{part}/beta")
     general = factor is not None and factor.kind == LOOKUP
     name = "general method of 11.3.6.4" if general else "simplified method of 11.3.6.3"
-    yield Other(
-        f"follows by the {name}, which the standard allows as well",
-        bench.reworked(node, swapped).interval,
-    )
+    sentence = f"follows by the {name}, which the standard allows as well"
+    yield from bench.by(node, swapped, sentence, pairs.values())
 
 
 def _parts_above(bench: Bench, node: Node, *symbols: str) -> Iterator[str]:
@@ -122,11 +143,12 @@ def _parts_above(bench: Bench, node: Node, *symbols: str) -> Iterator[str]:
             yield other.part
 
 
-def _recorded_pairs(bench: Bench, node: Node) -> dict[str, Form]:
+def _recorded_pairs(bench: Bench, node: Node) -> dict[str, str]:
+    """Return lines of the method chosen and, by them, those of the other one."""
     for part in _parts_above(bench, node, "beta", "theta"):
         if f"{part}/beta_g" in bench.graph.nodes:
             return {
-                f"{part}/{mine}": bench.world.used[f"{part}/{other}"]
+                f"{part}/{mine}": f"{part}/{other}"
                 for mine, other in _PAIRS.items()
                 if f"{part}/{other}" in bench.graph.nodes and f"{part}/{mine}" in bench.graph.nodes
             }
@@ -160,10 +182,8 @@ def _development(bench: Bench, node: Node) -> Iterator[Other]:
                 if f"{part}/{other}" in bench.graph.nodes:
                     swapped = {f"{part}/{mine}": bench.world.used[f"{part}/{other}"]}
                     name = "general expression of 12.2.2" if other == "l_d0g" else "table of 12.2.3"
-                    yield Other(
-                        f"follows by the {name}, which the standard allows as well",
-                        bench.reworked(node, swapped).interval,
-                    )
+                    sentence = f"follows by the {name}, which the standard allows as well"
+                    yield from bench.by(node, swapped, sentence, (f"{part}/{other}",))
 
 
 def _modulus(bench: Bench, node: Node) -> Iterator[Other]:
@@ -182,12 +202,10 @@ def _modulus(bench: Bench, node: Node) -> Iterator[Other]:
             forms, text, clause = [strength], _MODULI[0], "8.6.2.3"
         else:
             continue
-        swapped = {made.id: combined(_function(text), forms)}
-        yield Other(
-            f"follows with the modulus of elasticity by {clause}, which the standard allows as"
-            " well",
-            bench.reworked(node, swapped).interval,
+        sentence = (
+            f"follows with the modulus of elasticity by {clause}, which the standard allows as well"
         )
+        yield from bench.by(node, {made.id: combined(_function(text), forms)}, sentence)
 
 
 def _function(text: str) -> Callable[..., float]:
@@ -199,16 +217,19 @@ def _midspan_inertia(bench: Bench, node: Node) -> Iterator[Other]:
     for part in _parts_above(bench, node, "I_ea"):
         middle = bench.world.used.get(f"{part}/I_em")
         if middle is not None:
-            yield Other(
+            sentence = (
                 "follows with the moment of inertia at midspan alone, which 9.8.2.4 allows for "
-                "prismatic members",
-                bench.reworked(node, {f"{part}/I_ea": middle}).interval,
+                "prismatic members"
             )
+            swapped = {f"{part}/I_ea": middle}
+            yield from bench.by(node, swapped, sentence, (f"{part}/I_em",))
 
 
 def _table_resistance(bench: Bench, node: Node) -> Iterator[Other]:
     """M_r = K_r b d^2 with K_r read from a table to two digits."""
     if node.symbol != "M_r" or node.unit not in ("kN.m", "N.mm", "kip.ft", "kip.in"):
+        return
+    if _was_worked(bench, node):
         return
     width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
     if width is None or depth is None:
@@ -227,6 +248,8 @@ def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
     """A_s = rho b d with rho read from a table to four decimals."""
     if not node.symbol.startswith("A_s") or node.unit not in ("mm2", "in2"):
         return
+    if _was_worked(bench, node):
+        return
     width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
     if width is None or depth is None:
         return
@@ -238,6 +261,21 @@ def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
                 f"follows with the ratio read from a table as {read:g} in A_s = rho b d",
                 area.interval.times(read),
             )
+
+
+def _was_worked(bench: Bench, node: Node) -> bool:
+    """Tell whether a line's formula was worked, for which a table gives the result at once.
+
+    Who wrote down the depth of the stress block did not read K_r, which is there to do without.
+    """
+    graph = bench.graph
+    args = [target for name, target in node.args.items() if name not in (*_WIDTHS, "d")]
+    return any(
+        target in bench.claims
+        and graph[target].is_computed
+        and not graph[target].symbol.startswith("A_s")
+        for target in args
+    )
 
 
 def _readings(interval: Interval, decimals: int) -> tuple[float, ...]:

@@ -15,10 +15,19 @@ _SHARP = 0.02
 """Half width over value from which an interval is too wide to tell one factor from another."""
 _NEAR_ONE = 3.0
 """Factors nearer to one, such as kip.ft for kN.m, are too easily met by chance."""
-_COARSE = (5, 10, 25, 50, 100)
-"""Steps in units of the last digit to which a practitioner rounds lengths and areas."""
-_COARSE_ELSEWHERE = (10,)
-_BUILT = ("length", "area")
+_DIGIT_LESS = (10,)
+"""Steps in units of the last digit that write one digit less: any number is rounded so."""
+_BUILT = {"length": (5, 10), "area": (5, 10, 25, 50, 100)}
+"""Steps for sizes and areas."""
+_LAID_OUT = ("s", "l", "x", "b", "h")
+_SET_OUT = (5, 10, 25, 50, 100)
+"""Steps for lengths that are set out on a drawing, by the first letters of their symbols.
+
+Spacings, lengths along the beam, widths and overall depths; a depth within the section, such as d,
+a, c or d_v, is worked out and not chosen, so that nobody rounds it to 25 mm.
+"""
+_HALF = 0.5 + 1e-9
+"""The nearest multiple is no farther than half a step."""
 _EXACT_DIGITS = 6
 _LARGE = 10**6
 _FARTHEST = 0.025
@@ -51,32 +60,52 @@ def _factors(claim: Claim) -> Iterator[tuple[float, str]]:
 
 @dataclass(frozen=True, slots=True)
 class Rounded:
-    """A claim that is a rounding: of what, to which step in its unit, up or down."""
+    """A claim that may be a rounding: of what, to which step in its unit, up or down.
+
+    ``usual`` tells the nearest multiple, and digits cut off behind the last one; another multiple
+    is taken by nobody but to be on the safe side.
+    """
 
     of: float
     step: str
     up: bool
+    usual: bool
 
 
-def coarse_rounding(claim: Claim, follows: Iterable[Interval]) -> Rounded | None:
-    """Return how a claim rounds what follows, coarser than its digits say; None if it does not.
+def coarse_roundings(
+    claim: Claim, symbol: str, follows: Iterable[Interval]
+) -> Iterator[Rounded]:
+    """Give how a claim may round what follows, coarser than its digits say.
 
-    One unit of the last digit in either direction counts for every number. Lengths and areas are
-    rounded to 5, 10, 25, 50 of it as built, other numbers to 10, which writes one digit less.
+    One unit of the last digit in either direction counts for every number; ten of it, which write
+    one digit less; and what lengths and areas are rounded to as built. A zero written last behind
+    the point says that the digit before it was worked out: 62.0 is no rounding of 61.1 to 62.
     """
     number = Decimal(claim.typed)
     unit = _last_digit(claim)
-    coarse = _COARSE if UNITS[claim.unit].kind in _BUILT else _COARSE_ELSEWHERE
     for interval in follows:
         of = interval.middle
         away = abs(claim.value - of)
         if not of or away > _FARTHEST * abs(of) or not _is_simpler(number, of, claim.unit):
             continue
-        for count in (1, *coarse):
+        for count in (1, *_steps(claim, symbol)):
             step = unit * count
-            if number % step == 0 and away < float(step) * internal_factor(claim.unit):
-                return Rounded(of, _plain(step), abs(claim.value) > abs(of))
-    return None
+            far = away / (float(step) * internal_factor(claim.unit))
+            if number % step == 0 and far < 1:
+                up = abs(claim.value) > abs(of)
+                usual = far <= _HALF or (count == 1 and not up)
+                yield Rounded(of, _plain(step), up, usual)
+
+
+def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:
+    """Return the steps in units of the last digit that a claim may be rounded to beside one."""
+    digits = claim.typed.lower().partition("e")[0]
+    if "." in digits and digits.endswith("0"):
+        return ()
+    kind = UNITS[claim.unit].kind
+    if kind == "length" and symbol.startswith(_LAID_OUT):
+        return _SET_OUT
+    return _BUILT.get(kind, _DIGIT_LESS)
 
 
 def _plain(step: Decimal) -> str:
