@@ -22,6 +22,8 @@ from .planting_slips import Planted, Values, all_slips, three_digits
 
 MOST_CORNERS = 12
 """Arguments of which every end is tried against every end of the others."""
+TRIES = 8
+"""So many slips of a kind are tried on a beam until one moves its line."""
 PEN_EVERY = 5
 """Slips of the pen, each on a sheet of its own, are planted in every fifth beam."""
 
@@ -169,13 +171,13 @@ def sheet_with(graph: Graph, wanted: Sequence[Planted]) -> Sheet:
     return Sheet(graph, values, told)
 
 
-def sheets(graph: Graph, number: int) -> Iterator[Sheet]:
+def sheets(graph: Graph, number: int, seed: int = 0) -> Iterator[Sheet]:
     """Give sheets until every slip chosen for a beam was planted where it moves its line.
 
     Many slips on one sheet are still each judged by what stands above them. A slip of the pen, one
     that others drown, or that leaves a line below without a number, comes on a sheet of its own.
     """
-    wanted = chosen(graph, number)
+    wanted = chosen(graph, number, seed)
     first = sheet_with(graph, [slip for slip in wanted if slip.written is None])
     yield first
     done = {slip.id for slip in first.planted if slip.beyond}
@@ -189,17 +191,17 @@ def _change(graph: Graph, slip: Planted, values: Values) -> float:
     return abs(values[slip.id] - right) / max(abs(right), 1e-12)
 
 
-def chosen(graph: Graph, number: int, tries: int = 8) -> list[Planted]:
+def chosen(graph: Graph, number: int, seed: int = 0) -> list[Planted]:
     """Choose one slip of each kind that moves its line beyond rounding, each at a line of its own.
 
     First the slip, then the line, so that a slip which fits many lines is not the only one.
     """
-    draw = Random(number)  # noqa: S311 - the same slips every time
+    draw = Random(1_000_000 * seed + number)  # noqa: S311 - the same slips every time
     claims = claims_of(graph, graph.stored)
     made: list[Planted] = []
     taken: set[str] = set()
     for slips in all_slips(graph, draw).values():
-        for slip in _shuffled(slips, draw)[:tries]:
+        for slip in _shuffled(slips, draw)[:TRIES]:
             used = {slip.id} | {n for n, _ in slip.inputs}
             if used & taken or not _moves(graph, slip, claims):
                 continue

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Mapping
 from functools import cache
 from random import Random
 from typing import Any
@@ -89,19 +89,18 @@ def _whole(draw: Random, spans: int) -> Graph:
 
 
 @cache
-def beam(number: int) -> Graph:
-    """Return one of the random beams, 0 to ``BEAMS - 1``; a refused draw is drawn again."""
+def beam(number: int, seed: int = 0) -> Graph:
+    """Return one of the random beams, 0 to ``BEAMS - 1``; a refused draw is drawn again.
+
+    Another seed gives other beams.
+    """
     spans, said = _SPANS[number], ""
     for attempt in range(_TRIES):
-        draw = Random(1000 * number + attempt)  # noqa: S311 - the same beams every time
+        drawn = 1_000_000 * seed + 1000 * number + attempt
+        draw = Random(drawn)  # noqa: S311 - the same beams every time
         try:
             return _whole(draw, spans) if spans else _single(draw)
         except UserError as error:
             said = str(error)
     msg = f"no beam in {_TRIES} draws for number {number}: {said}"
     raise AssertionError(msg)
-
-
-def beams(step: int = 1) -> Iterator[tuple[int, Graph]]:
-    """Give the beams by number, or every so many of them."""
-    return ((number, beam(number)) for number in range(0, BEAMS, step))

@@ -1,7 +1,7 @@
 """What the audit makes of the seeded errors, counted by kind.
 
 ``python -m tests.audit.planting_measure`` from the root of the project prints the table and what
-went wrong; a number behind it takes every so many beams only.
+went wrong; a number behind it takes every so many beams only, a second one is another seed.
 """
 
 from __future__ import annotations
@@ -20,12 +20,13 @@ from .planting import Sheet, sheets, told_at
 from .planting_beams import BEAMS, beam
 from .planting_quick import Quick, quick_tables
 from .planting_rows import KINDS
+from .planting_slips import Planted
 
 FOUND = (Verdict.ORIGIN, Verdict.UNIT)
 CALM = (Verdict.AGREES, Verdict.CARRIED)
 """What may be said of a line that was honestly worked and written."""
 READINGS = (Verdict.OTHER_METHOD, Verdict.SAFE_ROUNDING, Verdict.UNSAFE_ROUNDING)
-"""What is said of a number that has a reading besides a slip."""
+"""What is said of a number that has a reading besides a slip, where no likely slip fits."""
 FIRST = 3
 QUICK_EVERY = 3
 """Every third beam is judged by its quick table too."""
@@ -35,8 +36,9 @@ QUICK_EVERY = 3
 class Tally:
     """Counts by kind of slip: planted beyond rounding, origin found, slip told; what went wrong.
 
-    ``another_reading`` are slips whose number by chance is that of another valid method or a round
-    one near the right value: they are called that, with the reading named.
+    Some slips give by chance the number of another valid method, or a round one near the right
+    value. ``doubtful`` are those told as such with the true slip named beside that reading,
+    ``not_told`` those that are called another way or a rounding, or doubtful for another slip.
     """
 
     planted: Counter[str] = field(default_factory=Counter)
@@ -44,7 +46,8 @@ class Tally:
     told: Counter[str] = field(default_factory=Counter)
     claims: int = 0
     untouched: int = 0
-    another_reading: list[str] = field(default_factory=list)
+    doubtful: list[str] = field(default_factory=list)
+    not_told: list[str] = field(default_factory=list)
     missed: list[str] = field(default_factory=list)
     false: list[str] = field(default_factory=list)
     untold: list[str] = field(default_factory=list)
@@ -66,20 +69,30 @@ class Tally:
             f"all: planted {self.planted.total()}, origin {self.found.total()}, among the first "
             f"three {self.told.total()} ({100 * self.share_told:.1f} %); {self.claims} claims, "
             f"{self.untouched} of them on untouched lines, false origins {len(self.false)}; "
-            f"by chance another valid way or a round number: {len(self.another_reading)}"
+            f"by chance another valid way or a round number: doubtful with the slip named "
+            f"{len(self.doubtful)}, not told {len(self.not_told)}"
         )
 
+    def another(self, slip: Planted, judged: Judged, what: str) -> bool:
+        """Count a slip whose number has another reading; tell whether it has."""
+        if judged.verdict is not Verdict.DOUBTFUL and judged.verdict not in READINGS:
+            return False
+        place = told_at(slip, judged)
+        told = judged.verdict is Verdict.DOUBTFUL and place is not None and place <= FIRST
+        (self.doubtful if told else self.not_told).append(f"{what}{judged.note}")
+        return True
 
-def measured(numbers: Iterable[int]) -> tuple[Tally, Tally]:
+
+def measured(numbers: Iterable[int], seed: int = 0) -> tuple[Tally, Tally]:
     """Judge the beams of these numbers; return the counts of full and of quick tables."""
     full, quick = Tally(), Tally()
     for number in numbers:
-        graph = beam(number)
-        for sheet in sheets(graph, number):
+        graph = beam(number, seed)
+        for sheet in sheets(graph, number, seed):
             _count_full(full, number, sheet)
         if number % QUICK_EVERY == 0:
-            for table in quick_tables(graph, number):
-                _count_quick(quick, number, table)
+            for table in quick_tables(graph, number, seed):
+                _count_quick(quick, number, graph, table)
     return full, quick
 
 
@@ -96,8 +109,7 @@ def _count_full(tally: Tally, number: int, sheet: Sheet) -> None:
         tally.planted[slip.kind] += 1
         what = f"beam {number}, {slip.kind}: {slip.id} worked as {slip.what}: "
         judged = said[slip.id]
-        if judged.verdict in READINGS:
-            tally.another_reading.append(f"{what}{judged.note}")
+        if tally.another(slip, judged, what):
             continue
         if judged.verdict not in FOUND:
             tally.missed.append(f"{what}{judged.verdict}, {judged.note}")
@@ -128,18 +140,16 @@ def _count_told(tally: Tally, kind: str, place: int | None, what: str, judged: J
         tally.untold.append(f"{what}claimed {typed} for {judged.follows}; said: {said}")
 
 
-def _count_quick(tally: Tally, number: int, table: Quick) -> None:
+def _count_quick(tally: Tally, number: int, graph: Graph, table: Quick) -> None:
     slip, claims = table.slip, table.claims
-    said = _judged(beam(number), claims.values())
+    said = _judged(graph, claims.values())
     tally.claims += len(claims)
     what = f"beam {number}, quick, {slip.kind}: {slip.id} worked as {slip.what}: "
     if table.shows_at:
         tally.planted[slip.kind] += 1
         origins = [said[i] for i in table.shows_at if said[i].verdict in FOUND]
-        ways = [i for i in table.shows_at if said[i].verdict in READINGS]
-        if ways and not origins:
-            tally.another_reading.append(f"{what}{said[ways[0]].note}")
-        elif not origins or any(said[i].verdict is Verdict.AGREES for i in table.shows_at):
+        told = bool(origins) or any(tally.another(slip, said[i], what) for i in table.shows_at)
+        if not told or any(said[i].verdict is Verdict.AGREES for i in table.shows_at):
             tally.missed.append(f"{what}{[(i, str(said[i].verdict)) for i in table.shows_at]}")
         if origins:
             tally.found[slip.kind] += 1
@@ -159,11 +169,12 @@ def report(full: Tally, quick: Tally, *, faults: bool = False) -> str:
     for name, tally in (("full tables", full), ("quick tables", quick)):
         lines += ["", name, *tally.lines()]
         if faults:
-            for word in ("another_reading", "missed", "false", "untold"):
+            for word in ("doubtful", "not_told", "missed", "false", "untold"):
                 lines += [f"{word}: {line}" for line in getattr(tally, word)]
     return "\n".join(lines) + "\n"
 
 
 if __name__ == "__main__":
-    STEP = int(sys.argv[1]) if len(sys.argv) > 1 else 1
-    sys.stdout.write(report(*measured(range(0, BEAMS, STEP)), faults=True))
+    GIVEN = [int(text) for text in sys.argv[1:]]
+    STEP, SEED = [*GIVEN, *[1, 0][len(GIVEN) :]]
+    sys.stdout.write(report(*measured(range(0, BEAMS, STEP), SEED), faults=True))

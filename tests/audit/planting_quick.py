@@ -30,9 +30,9 @@ class Quick:
     later: frozenset[str]
 
 
-def quick_tables(graph: Graph, number: int) -> Iterator[Quick]:
+def quick_tables(graph: Graph, number: int, seed: int = 0) -> Iterator[Quick]:
     """Give quick tables of a beam, each with another of the slips that were chosen for it."""
-    slips = [slip for slip in chosen(graph, number) if slip.written is None]
+    slips = [slip for slip in chosen(graph, number, seed) if slip.written is None]
     for turn in range(A_BEAM):
         slip = slips[(number // 5 + turn * len(slips) // A_BEAM) % len(slips)]
         sheet = sheet_with(graph, [slip])

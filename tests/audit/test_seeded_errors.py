@@ -45,15 +45,18 @@ def test_every_origin_is_found(tallies: tuple[Tally, Tally]) -> None:
     assert [line for tally in tallies for line in tally.missed] == []
 
 
-def test_few_slips_have_another_reading(tallies: tuple[Tally, Tally]) -> None:
-    """Another valid method or a round number near the right one: more would hide real slips.
+def test_hardly_a_slip_is_swallowed_by_another_reading(tallies: tuple[Tally, Tally]) -> None:
+    """Another valid method or a round number near the right one: told as doubtful, with the slip.
 
-    Quick tables hold fewer numbers, so that more of them can be reached in another way.
+    Of the rest one in a thousand may be left. In quick tables most slips lie above the lines that
+    are claimed, where nothing tells them from a reading that fits: one in fifty.
     """
     full, quick = tallies
 
-    assert len(full.another_reading) <= 0.01 * full.planted.total(), full.another_reading
-    assert len(quick.another_reading) <= 0.03 * quick.planted.total(), quick.another_reading
+    assert len(full.not_told) <= 0.001 * full.planted.total(), full.not_told
+    assert len(quick.not_told) <= 0.02 * quick.planted.total(), quick.not_told
+    assert len(full.doubtful) <= 0.005 * full.planted.total(), full.doubtful
+    assert full.doubtful
 
 
 def test_no_untouched_line_is_called_wrong(tallies: tuple[Tally, Tally]) -> None:

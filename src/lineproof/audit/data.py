@@ -95,6 +95,7 @@ class Verdict(StrEnum):
     ORIGIN = "origin"
     CARRIED = "carried"
     UNIT = "unit slip"
+    DOUBTFUL = "doubtful"
     OTHER_METHOD = "other valid method"
     SAFE_ROUNDING = "conservative rounding"
     UNSAFE_ROUNDING = "unconservative rounding"
@@ -107,7 +108,10 @@ class Slip:
     """One slip that reproduces a claimed value: its kind, the checker's sentence, its value.
 
     ``likely`` orders slips of one line, the most plausible first; it is no probability. ``also``
-    names other kinds of slip that give the very same value.
+    names other kinds of slip that give the very same value. ``swap`` are the ids of the value
+    replaced and of the one taken for it, where the slip puts a value for another; the same id
+    twice says that a result was written wrongly. ``above`` tells that it was made before the
+    claimed line, where nobody claimed anything.
     """
 
     kind: str
@@ -115,6 +119,14 @@ class Slip:
     value: float
     likely: float
     also: tuple[str, ...] = ()
+    swap: tuple[str, str] = ("", "")
+    above: bool = False
+
+    @property
+    def first(self) -> str:
+        """The first cause in words, without its stop, small at the beginning."""
+        said = self.sentence.partition(". The same value")[0].rstrip(".")
+        return said[:1].lower() + said[1:]
 
 
 @dataclass(frozen=True, slots=True)

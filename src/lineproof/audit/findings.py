@@ -12,7 +12,8 @@ from lineproof.audit.slips.search import none_fits
 
 SOURCE = "claims"
 FOUND = (
-    Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN,
+    Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.DOUBTFUL, Verdict.UNSAFE_ROUNDING,
+    Verdict.UNKNOWN,
 )  # fmt: skip
 """Verdicts that a checker writes down; what a line carries is told at its origin."""
 _MOST_EFFECTS = 300
@@ -59,12 +60,11 @@ def importance(finding: Finding) -> tuple[int, int, float]:
 
 
 def _carried(judged: Sequence[Judged]) -> dict[str, list[str]]:
-    """Return by origin the ids of the claims that carry it."""
+    """Return by origin, or doubtful line, the ids of the claims that carry it or rest on it."""
     found: dict[str, list[str]] = {}
     for each in judged:
-        if each.verdict is Verdict.CARRIED:
-            for cause in each.causes:
-                found.setdefault(cause, []).append(each.id)
+        for cause in each.causes:
+            found.setdefault(cause, []).append(each.id)
     return found
 
 
@@ -74,7 +74,7 @@ def _finding(
     node = graph[judged.id]
     what = f"{named_line(graph, judged.id)}: {_words(node, judged, claim)}"
     if carried:
-        what += f"; {_count(len(carried), 'claimed line carries', 'claimed lines carry')} it"
+        what += f"; {_resting(judged, len(carried))} it"
     return Finding(
         SOURCE, _severity(judged, effects), what, (judged.id, *carried),
         str(node.entry.get("clause", "")), effects=effects,
@@ -85,10 +85,19 @@ def _count(number: int, one: str, many: str) -> str:
     return f"{number} {one if number == 1 else many}"
 
 
+def _resting(judged: Judged, number: int) -> str:
+    if judged.verdict is Verdict.DOUBTFUL:
+        return _count(number, "claimed line rests on", "claimed lines rest on")
+    return _count(number, "claimed line carries", "claimed lines carry")
+
+
 def _severity(judged: Judged, effects: Sequence[Effect]) -> Severity:
-    """Return how much a finding matters, by what it does to the checks."""
+    """Return how much a finding matters, by what it does to the checks.
+
+    A doubtful line may be no error, so that none is critical.
+    """
     if any(e.holds_as_claimed and not e.holds for e in effects):
-        return Severity.CRITICAL
+        return Severity.MAJOR if judged.verdict is Verdict.DOUBTFUL else Severity.CRITICAL
     if judged.verdict in (Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN):
         return Severity.MINOR
     if any((e.holds and not e.holds_as_claimed) or _change(e) > _SMALL for e in effects):
@@ -105,6 +114,8 @@ def _change(effect: Effect) -> float:
 
 
 def _advice(graph: Graph, judged: Judged) -> str:
+    if judged.verdict is Verdict.DOUBTFUL:
+        return "Doubtful, not proved an error: ask which of the two was done."
     if judged.slips:
         sentence = judged.slips[0].sentence
         return sentence[:1].upper() + sentence[1:]

@@ -191,7 +191,7 @@ class Report:
         others = [
             f"{s.sentence[:1].lower()}{s.sentence[1:]}".rstrip(".")
             for s in slips[:MOST_SLIPS]
-            if s.sentence.lower() not in finding.advice.lower()
+            if s.first.lower() not in f"{finding.what} {finding.advice}".lower()
         ]
         return [f"Next in likelihood: {'; '.join(others)}."] if others else []
 

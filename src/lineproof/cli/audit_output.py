@@ -22,6 +22,7 @@ _COUNTED = (
     (Verdict.ORIGIN, "is the origin of an error", "are origins of errors"),
     (Verdict.CARRIED, "carries an error", "carry an error"),
     (Verdict.UNIT, "is a slip of units", "are slips of units"),
+    (Verdict.DOUBTFUL, "is doubtful", "are doubtful"),
     (Verdict.UNSAFE_ROUNDING, "is rounded unconservatively", "are rounded unconservatively"),
     (Verdict.UNKNOWN, "cannot be judged", "cannot be judged"),
 )

@@ -7,7 +7,8 @@ from collections.abc import Callable, Container, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
-from lineproof.audit.claims.other_methods import Bench, other_ways
+from lineproof.audit.claims.doubt import first_of, plausible
+from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
 from lineproof.audit.claims.safe_side import errs_safely
@@ -35,7 +36,8 @@ def judge(
     does not follow, three more readings are tried before it is called an origin: that later
     lines were worked from right values, though a claimed one is wrong; that a value which stands
     in several parts was changed in all; and another way, a unit or a rounding. ``find`` looks for
-    the slip behind an origin.
+    the slip behind an origin; where a likely one gives what another way or a rounding gives as
+    well, the line is doubtful.
     """
     return tuple(_Judge(graph, claims, find).all())
 
@@ -124,7 +126,7 @@ class _Judge:
             return made
         other = self._other_way(node, claim)
         if other is not None:
-            return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
+            return replace(made, verdict=Verdict.OTHER_METHOD, note=other.sentence)
         slip = unit_slip(claim, [point])
         said = f"the calc has {self._shown(node, right)}"
         if slip is not None:
@@ -181,9 +183,10 @@ class _Judge:
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
-        other = self._other_way(node, claim)
-        if other is not None:
-            return replace(made, verdict=Verdict.OTHER_METHOD, note=other)
+        way = self._other_way(node, claim)
+        if way is not None:
+            read = replace(made, verdict=Verdict.OTHER_METHOD, note=way.sentence)
+            return self._beside_a_slip(node, claim, read, way)
         for rounded in coarse_roundings(claim, node.symbol, around):
             safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
             if rounded.usual or safe:
@@ -194,10 +197,21 @@ class _Judge:
             return replace(made, verdict=Verdict.UNKNOWN, note=note, causes=self._causes(node))
         return replace(made, verdict=Verdict.ORIGIN, slips=self._slips(node, claim))
 
-    def _other_way(self, node: Node, claim: Claim) -> str | None:
-        """Return the sentence of the other valid way that gives a claim, if one does."""
+    def _beside_a_slip(
+        self, node: Node, claim: Claim, read: Judged, way: Other | None = None
+    ) -> Judged:
+        """Judge a line with a reading that is no error: doubtful where a slip is likely as well."""
+        slips = self._slips(node, claim)
+        slip = plausible(slips, claim, way)
+        if slip is None:
+            return replace(read, slips=slips if read.verdict in WRONG else ())
+        note = f"{read.note}; the same value is {slip.first}"
+        return replace(read, verdict=Verdict.DOUBTFUL, note=note, slips=first_of(slips, slip))
+
+    def _other_way(self, node: Node, claim: Claim) -> Other | None:
+        """Return the other valid way that gives a claim, if one does."""
         ways = chain.from_iterable(other_ways(bench, node) for bench in self.benches)
-        met = (way.sentence for way in ways if claim.stands_for.overlaps(way.interval))
+        met = (way for way in ways if claim.stands_for.overlaps(way.interval))
         return next(met, None)
 
     def _turns(self, decision: str) -> str:
@@ -212,12 +226,11 @@ class _Judge:
         way = "up" if rounded.up else "down"
         shown = self._shown(node, rounded.of, _DIGITS + 1)
         note = f"{shown} rounded {way} to a step of {rounded.step} {claim.unit}".rstrip()
-        if safe:
-            return replace(made, verdict=Verdict.SAFE_ROUNDING, note=f"{note}: conservative")
-        return replace(
-            made, verdict=Verdict.UNSAFE_ROUNDING, note=f"{note}: not conservative",
-            slips=self._slips(node, claim),
-        )  # fmt: skip
+        verdict = Verdict.SAFE_ROUNDING if safe else Verdict.UNSAFE_ROUNDING
+        said = "conservative" if safe else "not conservative"
+        return self._beside_a_slip(
+            node, claim, replace(made, verdict=verdict, note=f"{note}: {said}")
+        )
 
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         if self.find is None:

@@ -286,7 +286,7 @@ def _readings(interval: Interval, decimals: int) -> tuple[float, ...]:
 
 def _coefficients(bench: Bench, node: Node) -> Iterator[Other]:
     for sentence, interval in by_coefficients(bench.graph, bench.world.used, node):
-        yield Other(sentence, interval)
+        yield Other(sentence, interval, (node.id,))
 
 
 _WAYS: tuple[Callable[[Bench, Node], Iterator[Other]], ...] = (

@@ -72,9 +72,7 @@ class Rounded:
     usual: bool
 
 
-def coarse_roundings(
-    claim: Claim, symbol: str, follows: Iterable[Interval]
-) -> Iterator[Rounded]:
+def coarse_roundings(claim: Claim, symbol: str, follows: Iterable[Interval]) -> Iterator[Rounded]:
     """Give how a claim may round what follows, coarser than its digits say.
 
     One unit of the last digit in either direction counts for every number; ten of it, which write

@@ -29,8 +29,7 @@ def edits_of_bindings(line: Line) -> Iterator[Edit]:
         ways = [tuple(at)] + ([(k,) for k in at] if len(at) > 1 else [])
         for other in others_for(line, target, name):
             for places in ways if other.family in AT_ONE else ways[:1]:
-                far = other.far + (ONE_OF_MANY if len(places) < len(at) else 0.0)
-                yield Edit(other.family, places, other.value, other.half, other.words, far)
+                yield other.edit(places, target, ONE_OF_MANY if len(places) < len(at) else 0.0)
 
 
 def edits_of_arguments(line: Line) -> Iterator[Edit]:
@@ -46,4 +45,6 @@ def edits_of_arguments(line: Line) -> Iterator[Edit]:
                 made = real(line.node.compute(named | {name: other.value}))
             except (*FAILURES, UserError):
                 continue
-            yield Edit(other.family, TOP, made, abs(made) * relative, other.words, other.far)
+            spread = abs(made) * relative
+            swap = (target, other.took)
+            yield Edit(other.family, TOP, made, spread, other.words, other.far, swap)

@@ -27,6 +27,8 @@ class Edit(NamedTuple):
     """One slip: other values at some places of a formula, and how a checker would say it.
 
     ``far`` counts against it: by so much (natural logarithm) it is less likely than its family.
+    ``swap`` are the ids of the value that is replaced and of the one that is taken for it, where
+    the edit puts a value for another; the same id twice says that a result was written wrongly.
     """
 
     family: str
@@ -35,6 +37,7 @@ class Edit(NamedTuple):
     half: float
     words: Callable[[], str]
     far: float = 0.0
+    swap: tuple[str, str] = ("", "")
 
 
 @dataclass(frozen=True, slots=True)

@@ -19,7 +19,7 @@ b_sl b_sr | b_sn b_sl | b_sn b_sr | zeta_s zeta_sa | S_t S_ta | delta_D delta_DL
 delta_L delta_Lr | delta_sus delta_DL | p_c p_h | T_f T_cr | T_f T_fr | F_lt F_lc | l_d l_d0
 l_d l_s | l_d l_hb | x_f x_n | x_f b_sn | x_e x_t | x_t x_co | x_e x_co | a_t a_v | t_D t_L
 beta beta_g | theta theta_g | d_v l_b | b_s b_w | l_w s_b | l_w l | h_f b_o | k_1 k_4 | k_3 k_4
-d a | t_f T_f | A_vf A_s | n_E n_1 | l l_1 | l l_2 | f_c alpha_1
+d a | t_f T_f | A_vf A_s | n_E n_1 | l l_n | l l_1 | l l_2 | f_c alpha_1
 """
 PAIRS = frozenset(
     frozenset(pair.split()) for line in _PAIRS.split("\n") for pair in line.split("|")

@@ -6,7 +6,7 @@ from collections.abc import Callable, Iterator
 from functools import lru_cache, partial
 from typing import NamedTuple
 
-from lineproof.audit.slips.edits import Line, words_of
+from lineproof.audit.slips.edits import Edit, Line, words_of
 from lineproof.audit.slips.kinship import PAIRS, PARTNERS, SERVICE
 from lineproof.audit.slips.scope import is_next
 from lineproof.quantity.digits import rounded_text
@@ -14,13 +14,22 @@ from lineproof.quantity.units import internal_factor
 
 
 class Other(NamedTuple):
-    """Another value for a quantity: family, value, half width, words, and how far-fetched."""
+    """Another value for a quantity: family, value, half width, words, and how far-fetched.
+
+    ``took`` is the id of the line whose value it is, where it is that of another line.
+    """
 
     family: str
     value: float
     half: float
     words: Callable[[], str]
     far: float = 0.0
+    took: str = ""
+
+    def edit(self, at: tuple[int, ...], replaced: str, far: float = 0.0) -> Edit:
+        """Return the edit that puts it at some places for the value with the id ``replaced``."""
+        swap = (replaced, self.took)
+        return Edit(self.family, at, self.value, self.half, self.words, self.far + far, swap)
 
 
 def shown(line: Line, entry_id: str, value: float | None = None) -> str:
@@ -70,7 +79,8 @@ def other_quantities(line: Line, target: str, name: str) -> Iterator[Other]:
 def other_quantity(line: Line, family: str, other: str, target: str, name: str) -> Other:
     """Return another quantity in place of one."""
     value, half = line.pairs[other]
-    return Other(family, value, half, partial(_in_place, line, other, target, name))
+    words = partial(_in_place, line, other, target, name)
+    return Other(family, value, half, words, took=other)
 
 
 def _place(line: Line, target: str, other: str) -> str:

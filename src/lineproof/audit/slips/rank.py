@@ -86,7 +86,11 @@ def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
 
 def _slip(group: Group, claim: Claim) -> Slip:
     kind, *others = group.fits
-    return Slip(kind, _sentence(group, claim), group.value, group.share, tuple(others))
+    first = group.fits[kind]
+    return Slip(
+        kind, _sentence(group, claim), group.value, group.share, tuple(others),
+        first.edit.swap, above=bool(first.where),
+    )  # fmt: skip
 
 
 class Group(NamedTuple):

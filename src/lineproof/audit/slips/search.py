@@ -224,10 +224,7 @@ def _above(line: Line) -> Tried:
     if line.node.is_computed:
         edits = [*_inside(line), *edits_of_result(line)]
     else:
-        edits = [
-            Edit(other.family, TOP, other.value, other.half, other.words, other.far)
-            for other in others_for(line, line.node.id)
-        ]
+        edits = [other.edit(TOP, line.node.id) for other in others_for(line, line.node.id)]
     return _tried(line, edits)
 
 

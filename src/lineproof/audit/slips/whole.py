@@ -30,7 +30,7 @@ def edits_of_result(line: Line) -> Iterator[Edit]:
     for other in others_by_kind(line, line.node.id):
         if other.family != "centreline" and (other.family != "factored" or line.node.is_computed):
             family = "result factored" if other.family == "factored" else other.family
-            yield Edit(family, TOP, other.value, other.half, other.words, other.far)
+            yield other._replace(family=family).edit(TOP, line.node.id)
     yield from workable(_factored(line))
 
 
@@ -63,7 +63,7 @@ def _rows(line: Line) -> Iterator[Edit]:
         if value not in values:
             values.add(value)
             words = partial(_copied, line, other)
-            yield Edit(family, TOP, value, half, words)
+            yield Edit(family, TOP, value, half, words, swap=(node.id, other))
 
 
 def _copied(line: Line, other: str) -> str:
@@ -84,7 +84,8 @@ def _moments(line: Line) -> Iterator[Edit]:
             for value, text in _simple(unit, w, l):
                 words = partial(_by_simple, line, load, span, text)
                 family = "simple span" if text in ("**2/8", "/2") else "coefficient"
-                yield Edit(family, TOP, sign * value, abs(value * relative), words)
+                half = abs(value * relative)
+                yield Edit(family, TOP, sign * value, half, words, swap=(line.node.id, ""))
 
 
 def _simple(unit: str, w: float, l: float) -> Iterator[tuple[float, str]]:
@@ -168,7 +169,8 @@ def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
             words = partial("the result {} written as {}".format, meant, number)
             far = BY_ONE if _by_one_in_the_last(meant, number) else 0.0
             # What the claim would be if the line's own value had met the same slip.
-            yield Edit(family, TOP, claim.value + off, half, words, far)
+            own = line.node.id
+            yield Edit(family, TOP, claim.value + off, half, words, far, (own, own))
 
 
 def _by_one_in_the_last(first: str, second: str) -> bool:

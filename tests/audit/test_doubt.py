@@ -1,0 +1,202 @@
+"""Claims with two readings: told as doubtful with both; a reading alone, or a slip alone, is not.
+
+w_f l/2 = 40.3 x 6/2 = 120.9 kN; with the clear span 40.3 x 5.95/2 = 119.9 kN. A claim of 120 is the
+first with its last digit cut off, and the second to its last digit.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+import pytest
+from tests.audit import hand
+from tests.audit.hand import beam, judged, sheet_of, typed
+from tests.beams.continuous import flow
+
+from lineproof.audit.audit import audit_claims
+from lineproof.audit.claims.judge import SlipFinder
+from lineproof.audit.data import Audit, Severity, Verdict
+from lineproof.audit.graph import Graph
+from lineproof.audit.report import report_record
+from lineproof.audit.slips.search import find_slips
+from lineproof.cli.audit_output import as_data, as_text
+from lineproof.record import Record
+from lineproof.sheet import Sheet
+
+CLEAR = {"w_f": "40.3 kN/m", "l": "6 m", "l_n": "5.95 m", "V_r": "121 kN"}
+
+
+def shear(**changed: str) -> Record:
+    """Return a shear of a simple span, a double of it, and the check of the shear."""
+    sheet = sheet_of({"V_f = w_f*l/2": "kN", "R_f = 2*V_f": "kN"}, CLEAR | changed)
+    with sheet.part("checks", "Span 1: checks"):
+        sheet.check("V_f <= V_r", key="shear", title="Shear resistance")
+    return sheet.close()
+
+
+def said_of(
+    record: Record, claims: Mapping[str, str], line: str, find: SlipFinder | None = find_slips
+) -> tuple[Verdict, str]:
+    made = judged(record, claims, find)[line]
+    return made.verdict, made.note
+
+
+def audited(record: Record, claims: Mapping[str, str]) -> Audit:
+    graph = Graph(record)
+    return audit_claims(record, [typed(graph, i, t) for i, t in claims.items()], graph)
+
+
+def test_a_rounding_that_a_likely_slip_gives_as_well_is_doubtful() -> None:
+    verdict, note = said_of(shear(), {"beam/V_f": "120"}, "beam/V_f")
+    assert verdict is Verdict.DOUBTFUL
+    rounding, _, slip = note.partition("; the same value is ")
+    assert rounding == "120.90 kN rounded down to a step of 1 kN: not conservative"
+    assert slip.startswith("reproduced exactly with l_n (")
+
+
+def test_the_same_rounding_is_one_where_no_slip_gives_it() -> None:
+    """With a clear span of 5.4 m the shear is 108.8 kN, far from 120."""
+    said = said_of(shear(l_n="5.4 m"), {"beam/V_f": "120"}, "beam/V_f")
+    assert said[0] is Verdict.UNSAFE_ROUNDING
+    assert said_of(shear(), {"beam/V_f": "120"}, "beam/V_f", None)[0] is Verdict.UNSAFE_ROUNDING
+
+
+def test_a_slip_that_is_no_rounding_stays_an_origin() -> None:
+    assert said_of(shear(), {"beam/V_f": "119.9"}, "beam/V_f")[0] is Verdict.ORIGIN
+
+
+def test_what_rests_on_a_doubtful_line_agrees_and_names_it() -> None:
+    """2 x 120 = 240; with the right shear it is 241.8."""
+    claims = {"beam/V_f": "120", "beam/R_f": "240.0"}
+    made = judged(shear(), claims, find_slips)["beam/R_f"]
+    assert (made.verdict, made.causes) == (Verdict.AGREES, ("beam/V_f",))
+    (finding,) = audited(shear(), claims).findings
+    assert finding.ids == ("beam/V_f", "beam/R_f")
+    assert finding.what.endswith("1 claimed line rests on it")
+    assert finding.advice.startswith("Doubtful, not proved an error: ask which")
+
+
+@pytest.mark.parametrize(
+    ("resistance", "severity"),
+    [
+        ("121 kN", Severity.MINOR),  # 120/121 = 0.99 hides 120.9/121 = 1.00
+        ("120.5 kN", Severity.MAJOR),  # 120 holds, 120.9 does not: to be settled, yet not proved
+    ],
+)
+def test_a_doubtful_line_is_never_critical(resistance: str, severity: Severity) -> None:
+    (finding,) = audited(shear(V_r=resistance), {"beam/V_f": "120"}).findings
+    assert finding.severity is severity
+
+
+def test_doubtful_lines_are_counted_apart_from_origins() -> None:
+    """R_f 250 is an origin: 240 follows from 120. Both print; the report names the slip once."""
+    record = shear()
+    audit = audited(record, {"beam/V_f": "120", "beam/R_f": "250.5"})
+    graph = Graph(record)
+    text = as_text(audit, graph)
+    assert "1 is the origin of an error, 1 is doubtful" in text[1]
+    assert as_data(audit, graph)["counts"]["doubtful"] == 1
+    parts = {part["key"]: part for part in report_record(audit, record).parts}
+    counts = next(e for e in parts["compared"]["entries"] if e["id"] == "compared/verdicts")
+    assert ["doubtful", "1"] in counts["rows"]
+    notes = [e["text"] for p in parts.values() for e in p["entries"] if e["kind"] == "note"]
+    assert sum("l_n (" in text for text in notes) == 1
+
+
+# -- readings that stay as they are ------------------------------------------------------------
+
+
+def test_a_table_value_stays_one_where_a_slip_above_would_give_it_too() -> None:
+    """209 = 1.8 x 400 x 539^2; alpha_1 left out of the unclaimed a gives 209.2 as well."""
+    said = said_of(beam(), {"beam/d": "539", "strength/M_r": "209"}, "strength/M_r")
+    assert said[0] is Verdict.OTHER_METHOD
+
+
+def test_the_other_method_is_no_slip_of_taking_its_factor() -> None:
+    """V_c by the simplified method is V_c with beta_g for beta: one reading, not two."""
+    record = flow.record_of()
+    value = float(record.entries["shear-1-left/V_cg"]["value"])
+    claims = {"shear-1-left/V_c": f"{value:.2f}"}
+    assert said_of(record, claims, "shear-1-left/V_c")[0] is Verdict.OTHER_METHOD
+
+
+def test_a_result_written_wrongly_is_no_second_reading() -> None:
+    """206 is 206.6 cut off, and 209 mistyped: every rounding differs from its number somewhere."""
+    exact = {"beam/d": "538.95", "beam/a": "64.979"}
+    said = said_of(beam(), exact | {"strength/M_r": "206"}, "strength/M_r")
+    assert said[0] is Verdict.SAFE_ROUNDING
+
+
+# -- readings that were too generous -----------------------------------------------------------
+
+
+def test_a_depth_within_the_section_is_not_rounded_to_25_mm() -> None:
+    """d 538.95: 540 and 535 are roundings to 5 mm; 550 on a step of 25 is none."""
+    assert said_of(beam(), {"beam/d": "550"}, "beam/d")[0] is Verdict.ORIGIN
+    assert said_of(beam(), {"beam/d": "540"}, "beam/d", None)[0] is Verdict.UNSAFE_ROUNDING
+
+
+def test_a_length_that_is_set_out_is_rounded_to_25_mm() -> None:
+    """l_d = 1.1 x 925 = 1017.5, as d_v: only a length along the beam is made 1025."""
+    givens = {"k_1": "1.1", "d_b": "925 mm"}
+    lines = {"l_d = k_1*d_b": "mm", "d_v = k_1*d_b": "mm"}
+    record = sheet_of(lines, givens).close()
+    said = {i: said_of(record, {i: "1025"}, i)[0] for i in ("beam/l_d", "beam/d_v")}
+    assert said == {"beam/l_d": Verdict.SAFE_ROUNDING, "beam/d_v": Verdict.ORIGIN}
+
+
+def test_a_zero_written_behind_the_point_was_worked_out() -> None:
+    """M_r 206.64: 207.0 says 206.95 to 207.05, so that it is no rounding to 1 kN.m."""
+    exact = {"beam/d": "538.95", "beam/a": "64.979"}
+    said = said_of(beam(), exact | {"strength/M_r": "207.0"}, "strength/M_r")
+    assert said[0] is Verdict.ORIGIN
+
+
+def demand(*, checked: bool) -> Record:
+    """M_f = 100.7 x 6^2/8 = 453.15 kN.m, with or without a check that rests on it."""
+    givens = {"w_f": "100.7 kN/m", "l": "6 m", "M_r": "500 kN.m"}
+    sheet: Sheet = hand.sheet_of({"M_f = w_f*l**2/8": "kN.m"}, givens)
+    if checked:
+        with sheet.part("checks", "Span 1: checks"):
+            sheet.check("M_f <= M_r", key="strength", title="Moment resistance")
+    return sheet.close()
+
+
+def test_no_one_rounds_past_the_nearest_step_but_to_the_safe_side() -> None:
+    """453.15 lies nearer to 450; 460 is taken for a demand that a check rests on, else by nobody.
+
+    450 is the nearest step, and not conservative where the check rests on it.
+    """
+    cases = {
+        (True, "460"): Verdict.SAFE_ROUNDING,
+        (False, "460"): Verdict.ORIGIN,
+        (True, "450"): Verdict.UNSAFE_ROUNDING,
+        (False, "450"): Verdict.SAFE_ROUNDING,
+    }
+    found = {
+        (checked, text): said_of(demand(checked=checked), {"beam/M_f": text}, "beam/M_f", None)[0]
+        for checked, text in cases
+    }
+    assert found == cases
+
+
+def test_a_way_is_taken_as_a_whole() -> None:
+    """Who claims the beta of the recorded method did not work V_c by the other one.
+
+    With the beta of the other method claimed too, both are of the other method.
+    """
+    record = flow.record_of()
+    part = "shear-1-left"
+    values = {s: float(record.entries[f"{part}/{s}"]["value"]) for s in ("beta", "V_cg")}
+    other = {f"{part}/V_c": f"{values['V_cg']:.2f}"}
+    own = {f"{part}/beta": f"{values['beta']:.4f}"}
+    assert said_of(record, other | own, f"{part}/V_c", None)[0] is Verdict.ORIGIN
+    both = judged(record, other | {f"{part}/beta": "0.180"})
+    assert both[f"{part}/beta"].verdict is Verdict.OTHER_METHOD
+    assert both[f"{part}/V_c"].verdict is Verdict.AGREES
+
+
+def test_who_wrote_down_the_stress_block_did_not_read_a_table() -> None:
+    """K_r = 1.8 gives 209.2; with a = 65.0 claimed M_r is 408 000 x (539 - 32.5) = 206.7."""
+    claims = {"beam/d": "539", "beam/a": "65.0", "strength/M_r": "209"}
+    assert said_of(beam(), claims, "strength/M_r", None)[0] is Verdict.ORIGIN
