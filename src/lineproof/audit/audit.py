@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterable, Sequence
 
 import numpy as np
 
+from lineproof.audit.claims.conventions import convention_of
 from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Audit, Claim, Finding
 from lineproof.audit.findings import findings_of, importance
@@ -32,7 +33,8 @@ def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = 
     graph = graph or Graph(record)
     with np.errstate(all="ignore"):  # absurd claims lead procedures to infinities: no value
         judged = judge(graph, claims, searching())
-        return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged))
+        notes = tuple(filter(None, [convention_of(graph, claims).sentence]))
+        return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged), notes)
 
 
 def audit_alone(record: Record, more: Iterable[Finding] = ()) -> Audit:

@@ -74,6 +74,7 @@ def read_from(text: str) -> Interval:
 class Claim:
     """A value that somebody else wrote for a line: as typed, and what it stands for.
 
+    A moment claimed in another sign convention has the calc's own sign in both numbers.
     ``row`` is its row in the table that it came from, counted as the spreadsheet shows it;
     ``where`` is its place in the other's calculation as the table says: ``p. 3``.
     """
@@ -187,9 +188,13 @@ class Finding:
 
 @dataclass(frozen=True, slots=True)
 class Audit:
-    """All that an audit found about one calculation; ``findings`` the gravest first."""
+    """All that an audit found about one calculation; ``findings`` the gravest first.
+
+    ``notes`` say how the claims were read, where that is no finding.
+    """
 
     calc: str
     digest: str
     judged: tuple[Judged, ...] = ()
     findings: tuple[Finding, ...] = ()
+    notes: tuple[str, ...] = ()

@@ -139,6 +139,8 @@ class Report:
                 title="Calculation audited",
             )
             sheet.note("how", _CLAIMS if audit.judged else _NO_CLAIMS, title="How")
+            for number, note in enumerate(audit.notes, 1):
+                sheet.note(f"read-{number}", note, title="How claims were read")
             rows = [[str(s), str(n)] for s, n in self._severities()]
             if rows:
                 sheet.table(

@@ -40,6 +40,7 @@ def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
     yield f"{audit.calc}  {title}  digest {audit.digest}"
     if audit.judged:
         yield _counts(audit)
+    yield from (f"note: {note}" for note in audit.notes)
     findings = audit.findings
     yield _many(len(findings), "finding", "findings") if findings else "no findings"
     number = 0
@@ -91,7 +92,9 @@ def _remarks(audit: Audit, graph: Graph) -> Iterator[str]:
 
 
 def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
-    """Return an audit as plain data: ``calc``, ``digest``, ``counts``, ``judged``, ``findings``.
+    """Return an audit as plain data.
+
+    It holds ``calc``, ``digest``, ``counts``, ``judged``, ``findings`` and ``notes``.
 
     Values of a judged line stand in ``unit``, the unit in which the line prints.
     """
@@ -102,6 +105,7 @@ def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
         "counts": dict(sorted(counts.items())),
         "judged": [_judged(j, graph[j.id]) for j in audit.judged if j.claim is not None],
         "findings": [_finding_data(finding) for finding in audit.findings],
+        "notes": list(audit.notes),
     }
 
 

@@ -7,6 +7,7 @@ from collections.abc import Callable, Container, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
+from lineproof.audit.claims.conventions import in_our_signs
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
@@ -37,9 +38,19 @@ def judge(
     lines were worked from right values, though a claimed one is wrong; that a value which stands
     in several parts was changed in all; and another way, a unit or a rounding. ``find`` looks for
     the slip behind an origin; where a likely one gives what another way or a rounding gives as
-    well, the line is doubtful.
+    well, the line is doubtful. Moments claimed in another sign convention are read in the calc's
+    own signs, and keep what was typed.
     """
-    return tuple(_Judge(graph, claims, find).all())
+    typed = {claim.id: claim.typed for claim in claims}
+    found = _Judge(graph, in_our_signs(graph, claims), find).all()
+    return tuple(_as_typed(each, typed) for each in found)
+
+
+def _as_typed(judged: Judged, typed: Mapping[str, str]) -> Judged:
+    claim = judged.claim
+    if claim is None or claim.typed == typed[claim.id]:
+        return judged
+    return replace(judged, claim=replace(claim, typed=typed[claim.id]))
 
 
 _LAMBDA = re.compile(r"\blambda_(?!\w)")

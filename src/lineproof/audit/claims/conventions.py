@@ -1,0 +1,105 @@
+"""Moments claimed with the opposite sign throughout: another sign convention, no error.
+
+One engineer writes hogging moments negative, the other positive. Where every claimed moment of a
+kind has the sign opposite to the calc's, the claims are read in the calc's own signs; a single
+one of opposite sign among others is a slip.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Container, Hashable, Sequence
+from dataclasses import dataclass, replace
+
+from lineproof.audit.data import Claim
+from lineproof.audit.graph import Graph, Node
+from lineproof.audit.slips.scope import stem
+from lineproof.quantity.units import UNITS
+
+LEAST = 2
+"""One moment alone says nothing of a convention."""
+MOSTLY = 0.5
+"""A symbol counts as negative in the calc if more than so much of its values are."""
+_MOMENT = "N.mm"
+_MOST_NAMED = 4
+
+
+@dataclass(frozen=True, slots=True)
+class Convention:
+    """Claimed moments that have the sign opposite to the calc's; the sentence is empty for none."""
+
+    ids: frozenset[str] = frozenset()
+    sentence: str = ""
+
+
+def convention_of(graph: Graph, claims: Sequence[Claim]) -> Convention:
+    """Return the claimed moments whose kind is claimed with the opposite sign throughout.
+
+    Kinds are tried from wide to narrow: moments of all symbols that the calc counts as negative,
+    a few of which may be positive under pattern loads; then those of one symbol. Of a symbol that
+    is positive in the calc, hogging and sagging moments are kinds of their own, told apart by the
+    sort of part.
+    """
+    signed = [claim for claim in claims if _has_sign(graph, claim)]
+    negative = _negative(graph)
+    found: dict[str, Claim] = {}
+    for kind in (_wide, _narrow):
+        groups: dict[Hashable, list[Claim]] = {}
+        for claim in signed:
+            groups.setdefault(kind(graph[claim.id], negative), []).append(claim)
+        for key, group in groups.items():
+            if key and len(group) >= LEAST and all(_is_opposite(graph, c) for c in group):
+                found |= {claim.id: claim for claim in group}
+    return _told(graph, list(found.values()))
+
+
+def in_our_signs(graph: Graph, claims: Sequence[Claim]) -> list[Claim]:
+    """Return claims with those of another sign convention read in the calc's own signs."""
+    other = convention_of(graph, claims).ids
+    return [_turned(claim) if claim.id in other else claim for claim in claims]
+
+
+def _has_sign(graph: Graph, claim: Claim) -> bool:
+    return (
+        UNITS[graph[claim.id].unit].internal == _MOMENT
+        and bool(graph.stored[claim.id])
+        and not claim.stands_for.holds(0.0)
+    )
+
+
+def _is_opposite(graph: Graph, claim: Claim) -> bool:
+    return (claim.value < 0) != (graph.stored[claim.id] < 0)
+
+
+def _negative(graph: Graph) -> frozenset[str]:
+    """Return the symbols of moments, without the number of their place, mostly negative here."""
+    signs: dict[str, list[bool]] = {}
+    for node in graph:
+        if node.has_value and UNITS[node.unit].internal == _MOMENT:
+            signs.setdefault(stem(node.symbol), []).append(graph.stored[node.id] < 0)
+    return frozenset(own for own, all_ in signs.items() if sum(all_) > MOSTLY * len(all_))
+
+
+def _wide(node: Node, negative: Container[str]) -> Hashable:
+    return stem(node.symbol) in negative
+
+
+def _narrow(node: Node, negative: Container[str]) -> Hashable:
+    own = stem(node.symbol)
+    return own if own in negative else (own, node.part.partition("-")[0])
+
+
+def _turned(claim: Claim) -> Claim:
+    typed = claim.typed.removeprefix("-") if claim.typed.startswith("-") else f"-{claim.typed}"
+    return replace(claim, typed=typed, value=-claim.value, stands_for=claim.stands_for.times(-1))
+
+
+def _told(graph: Graph, claims: Sequence[Claim]) -> Convention:
+    if not claims:
+        return Convention()
+    symbols = list(dict.fromkeys(graph[claim.id].symbol for claim in claims))
+    named = ", ".join(symbols[:_MOST_NAMED]) + (" and more" if len(symbols) > _MOST_NAMED else "")
+    return Convention(
+        frozenset(claim.id for claim in claims),
+        f"{len(claims)} claimed moments ({named}) have the sign opposite to the calc's throughout: "
+        "read as another sign convention, not as errors. See that theirs is stated.",
+    )
