@@ -53,6 +53,11 @@ PARTS: dict[str, tuple[Mapping[str, str], Mapping[str, str]]] = {
 
 IN_METRES = ("metres", "M_o = w_f*l_2**2/8")
 """Part and line that a hand works in kN and m."""
+MATERIALS = {
+    "E_c = 4500*sqrt(f_c)": ("MPa", {"4500": "MPa^0.5"}),
+    "c_d = 700/(700 + f_y)": ("", {"700": "MPa"}),
+}
+"""Lines with constants that other standards print otherwise, and the units of these."""
 EMPIRICAL = ("0.2", "1.0")
 """Constants before the root of a stress: they carry its unit."""
 
@@ -75,6 +80,10 @@ def beam() -> Graph:
                 )
     with sheet.part(IN_METRES[0], "Worked in kN and m"):
         sheet.line(formula(IN_METRES[1], unit="kN.m", system="kN-m", title="line of M_o"))
+    with sheet.part("materials", "Materials"):
+        for text, (unit, numbers) in MATERIALS.items():
+            title = f"line of {text.split()[0]}"
+            sheet.line(formula(text, unit=unit, numbers=numbers, title=title))
     return Graph(sheet.close())
 
 

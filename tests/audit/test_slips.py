@@ -84,6 +84,26 @@ def test_rounding_of_the_arguments_is_allowed_for() -> None:
     assert not slips("sag-1/M_r", wrong, digits=5)
 
 
+def test_a_digit_is_misread_in_the_argument_as_it_was_claimed() -> None:
+    # d is claimed as 518 where 536.1 is right; 581 was read from it.
+    used = {"sag-1/d": Interval(517.5, 518.5)}
+
+    found = slips("sag-1/M_r", T * (581 - A / 2) / 1e6, used=used)
+
+    assert found[0].kind == "transposed digits"
+    assert "typed as 581 in place of 518" in found[0].sentence
+
+
+def test_an_angle_taken_in_radians_is_met_over_the_digits_it_is_claimed_with() -> None:
+    # theta claimed 36.0 stands for 35.95 to 36.05: cot of so many radians is 0.179 to 0.078.
+    used = {"given/theta": Interval(35.95, 36.05)}
+    wrong = 0.85 * 200 * 400 * 480 / math.tan(36.04) / 250 / 1e3
+
+    found = slips("shear-1-left/V_s", wrong, used=used, digits=3)
+
+    assert found[0].kind == "degrees for radians"
+
+
 def test_a_common_slip_is_told_before_a_far_fetched_one() -> None:
     # 536.1 + 11.3 = 547.4: the stirrup left out; a claim of three digits, 547, is met by more.
     found = slips("sag-1/d", D + 11.3, digits=3)

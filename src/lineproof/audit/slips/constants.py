@@ -29,7 +29,9 @@ def _others(*rows: tuple[float, str]) -> tuple[Other, ...]:
 
 
 IN_FORMULAS: dict[tuple[str, str], tuple[Other, ...]] = {
-    ("E_c", "4500"): _others((4700, _ACI), (5000, _84)),
+    ("E_c", "4500"): _others(
+        (4700, _ACI), (4733, "57 000 in psi, ACI 318"), (5000, _84), (4750, "rounded")
+    ),
     ("f_r", "0.6"): _others((0.62, _ACI), (0.3, _HALF), (0.7, "older ACI 318M")),
     ("f_rd", "0.5"): _others((1.0, "A23.3-04")),
     ("alpha_1", "0.85"): _others((0.8, "rounded")),
@@ -90,6 +92,12 @@ _LOADS = {
     "1.4": _others((1.25, "load case 2"), (1.2, _ACI)),
 }
 """Load factors, wherever they multiply a load or its effect."""
+
+LOAD_PAIRS = (
+    (1.2, 1.6, _ACI), (1.4, 1.7, "ACI 318 before 2002"), (1.35, 1.5, _EC),
+    (1.5, 1.25, "the two exchanged"),
+)  # fmt: skip
+"""Factors of dead and of live load that other documents use together."""
 
 BY_SYMBOL: dict[str, tuple[Other, ...]] = {
     "phi_c": _others((0.6, _94), (0.7, "precast, 16.1.3"), (0.75, "shear, ACI 318M"),

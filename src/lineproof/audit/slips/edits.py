@@ -9,10 +9,8 @@ from functools import partial
 from typing import NamedTuple
 
 from lineproof.audit.graph import Node
-from lineproof.audit.slips.constants import of_constant
-from lineproof.audit.slips.digits import changed, swapped
 from lineproof.audit.slips.scope import LOADS, Pairs, Scope
-from lineproof.audit.slips.tree import FAILURES, OPERATIONS, Place, Places, text_of
+from lineproof.audit.slips.tree import FAILURES, OPERATIONS, Pair, Place, Places, text_of
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
 TOP = (0,)
@@ -107,9 +105,6 @@ def edits_of(line: Line) -> Iterator[Edit]:
             case Negative():
                 value, half = line.pair(place.below[0])
                 yield Edit("sign", (at,), value, half, partial(_sign, line, place.below[0]), 0.0)
-            case Number(text):
-                yield from _number(line, at, text)
-    yield from _service(line)
 
 
 def workable(edits: Iterator[Edit]) -> Iterator[Edit]:
@@ -304,8 +299,7 @@ def _angle(line: Line, at: int, function: str, angle: float, half: float) -> Ite
     text = line.text(line.places.places[at].below[0])
     if math.sin(angle):
         # The function of radians, given degrees: one of so many times more degrees.
-        value = OPERATIONS[function](math.degrees(angle))
-        spread = half * (1 + value**2)
+        value, spread = _in_radians(OPERATIONS[function], angle, half)
         words = partial("{} taken in degrees by a function of radians".format, text)
         yield Edit("degrees", (at,), value, spread, words)
     for other in ("sin", "cos", "tan", "cot"):
@@ -315,43 +309,15 @@ def _angle(line: Line, at: int, function: str, angle: float, half: float) -> Ite
             yield Edit("function", (at,), value, math.radians(half) * (1 + value**2), words)
 
 
-def _number(line: Line, at: int, text: str) -> Iterator[Edit]:
-    symbol = line.scope.stems[line.node.id]
-    own = _symbol_of(line.node)
-    others = of_constant(own, text, is_load=line.is_load)
-    if symbol != own:
-        others = (*others, *of_constant(symbol, text, is_load=False))
-    for other in others:
-        words = partial(
-            "{:.6g} ({}) in place of the constant {}".format, other.value, other.source, text
-        )
-        yield Edit("edition", (at,), other.value, 0.0, words)
-    for typed in () if line.above else (*swapped(text), *changed(text)):
-        words = partial("the constant {} mistyped as {}".format, text, typed)
-        yield Edit("mistyped constant", (at,), float(typed), 0.0, words)
+def _in_radians(function: Callable[[float], float], angle: float, half: float) -> Pair:
+    """Return what a function of degrees gives for an angle taken in radians, at its ends.
 
-
-def _symbol_of(node: Node) -> str:
-    """Return the symbol that a line's formula gives: ``V_cg`` may be made as ``V_c = ...``."""
-    return str(node.entry.get("formula", "")).partition("=")[0].strip() or node.symbol
-
-
-def _service(line: Line) -> Iterator[Edit]:
-    """Give a sum of factored loads with every load factor left out, and with the two exchanged."""
-    if not line.is_load:
-        return
-    places = line.places.places
-    at = [k for k, place in enumerate(places) if _is_load_factor(place.tree)]
-    if len(at) > 1:
-        words = partial(
-            "{}".format, "every load factor left out, specified loads for factored ones"
-        )
-        yield Edit("service", tuple(at), 1.0, 0.0, words)
-    for k in at:
-        for other in {line.places.values[j] for j in at} - {line.places.values[k]}:
-            words = partial("the load factor {:.4g} in place of {}".format, other, line.text(k))
-            yield Edit("load factor", (k,), other, 0.0, words)
-
-
-def _is_load_factor(tree: Tree) -> bool:
-    return isinstance(tree, Number) and tree.text in LOAD_FACTORS
+    Half a tenth of a degree is 3 degrees then, over which cot is no straight line; between two
+    ends of other sign it may be anything, and the slope at the middle is as good.
+    """
+    value = function(math.degrees(angle))
+    ends = [function(math.degrees(angle + way * half)) for way in (-1, 1)]
+    low, high = min(ends), max(ends)
+    if not low <= value <= high or low * high < 0:
+        return value, half * (1 + value**2)
+    return (low + high) / 2, (high - low) / 2

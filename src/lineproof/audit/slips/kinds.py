@@ -48,6 +48,7 @@ FAMILIES: dict[str, Family] = {
     "centreline": Family("centreline for face", 2.0),
     # constants
     "edition": Family("constant of another edition or standard", 1.0),
+    "load pair": Family("constant of another edition or standard", 1.0),
     "table row": Family("other row of the table", 0.6),
     "grade": Family("other strength", 0.3),
     "mistyped constant": Family("mistyped digit", 0.1),

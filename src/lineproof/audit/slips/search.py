@@ -11,6 +11,7 @@ from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.bindings import edits_of_arguments, edits_of_bindings
 from lineproof.audit.slips.carry import Carrier, Onward, fitting, may_reach, reach_of
 from lineproof.audit.slips.edits import TOP, Edit, Line, edits_of, words_of
+from lineproof.audit.slips.numbers import edits_of_numbers
 from lineproof.audit.slips.rank import Fit, ranked, shares
 from lineproof.audit.slips.scope import Pairs, Scope, scope_of
 from lineproof.audit.slips.tree import FAILURES, Pair, Places
@@ -23,6 +24,8 @@ FARTHER = 0.1
 LOOSE, ROUNDED = 1.5, 0.006
 """At first fits are sought so many widths wide, and for the width that another value of three
 digits brings; then the width of each is worked out."""
+WIDE = frozenset(("degrees",))
+"""Families of which every edit is worked out with its width: cot of 36.1 radians is -0.1 to 0."""
 Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
 """What :func:`find_slips` is: graph, line, values used, claim, claimed ids; gives the slips."""
 MOST_KEPT = 400
@@ -75,12 +78,16 @@ def none_fits(graph: Graph, entry_id: str) -> str:
 
 @dataclass(frozen=True, slots=True)
 class Tried:
-    """The edits of a line with what each makes of the line, in the order of these values."""
+    """The edits of a line with what each makes of the line, in the order of these values.
+
+    ``wide`` are those whose value moves far within the digits of an argument.
+    """
 
     line: Line
     edits: Sequence[Edit]
     values: Sequence[float]
     share: Mapping[str, float]
+    wide: Sequence[int]
 
 
 @dataclass(frozen=True, slots=True)
@@ -215,7 +222,7 @@ def _inside(line: Line) -> list[Edit]:
     The arguments of a found value are tried in the claimed line only: each costs a run.
     """
     if line.node.tree is not None:
-        return [*edits_of(line), *edits_of_bindings(line)]
+        return [*edits_of(line), *edits_of_numbers(line), *edits_of_bindings(line)]
     return list(edits_of_arguments(line)) if line.node.is_computed and not line.above else []
 
 
@@ -236,7 +243,9 @@ def _tried(line: Line, edits: Sequence[Edit]) -> Tried:
         except FAILURES:
             continue
     worked.sort(key=lambda pair: pair[0])
-    return Tried(line, [e for _, e in worked], [v for v, _ in worked], shares(edits))
+    ordered = [edit for _, edit in worked]
+    wide = [at for at, edit in enumerate(ordered) if edit.family in WIDE]
+    return Tried(line, ordered, [value for value, _ in worked], shares(edits), wide)
 
 
 def _fits(
@@ -247,7 +256,7 @@ def _fits(
         found = [at for at, value in enumerate(tried.values) if low <= value <= high]
     else:
         found = fitting(onward.quick, tried.values, low, high) if tried.values else []
-    for at in found:
+    for at in dict.fromkeys((*found, *tried.wide)):
         edit = tried.edits[at]
         if onward is not None and edit.value == target.claim.value:
             continue  # the claim itself, or what only repeats it, explains nothing above it

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterator
+from decimal import Decimal
 from functools import partial
 from itertools import islice
 
@@ -14,7 +15,7 @@ from lineproof.audit.slips.kinship import SERVICE
 from lineproof.audit.slips.quantities import Other, other_quantities, other_quantity, shown
 from lineproof.audit.slips.scope import LOADS
 from lineproof.audit.slips.units import ways_of_units
-from lineproof.quantity.units import UNITS
+from lineproof.quantity.units import UNITS, internal_factor
 from lineproof.record.entry import GIVEN, LOOKUP
 
 FACTORED = tuple(
@@ -24,6 +25,8 @@ FACTORED = tuple(
 """Load factors, and how it is said that one was used or taken out."""
 FIRST_DIGITS = 27
 """So many changes of digits are tried: nine for each of the first three."""
+WHOLE = 1e-6
+"""By so much the logarithm of one unit of a digit may differ from a whole number."""
 LARGEST_STRAIN = 0.05
 """A bare number below it may be a strain, of which the power of ten is easily lost."""
 
@@ -179,11 +182,9 @@ def _digits(line: Line, target: str, name: str) -> Iterator[Other]:
     node = line.scope.graph[target]
     if line.above and node.kind != GIVEN:
         return
-    if node.kind == GIVEN:
-        number, families = written(str(node.entry.get("typed", ""))), ("swapped", "mistyped")
-    else:
-        number = written(str(node.entry["printed"].get("result", "")))
-        families = ("swapped argument", "mistyped argument")
+    own = "" if node.kind == GIVEN else " argument"
+    families = (f"swapped{own}", f"mistyped{own}")
+    number = _read_as(line, target)
     value = line.pairs[target][0]
     if not number or not float(number) or UNITS[node.unit].kind == "angle":
         return
@@ -193,6 +194,19 @@ def _digits(line: Line, target: str, name: str) -> Iterator[Other]:
             new = value * float(typed) / float(number)
             said = partial(_mistyped, line, target, name, typed, number)
             yield Other(family, new, 0.0, said)
+
+
+def _read_as(line: Line, target: str) -> str:
+    """Return the number that a value is read as: as it was claimed, else as it was printed."""
+    node, (value, half) = line.scope.graph[target], line.pairs[target]
+    factor = internal_factor(node.unit)
+    unit = math.log10(2 * half / factor) if half else 0.5
+    if abs(unit - round(unit)) < WHOLE:  # a claimed number stands for half of its last digit
+        number = Decimal(value / factor).quantize(Decimal(1).scaleb(round(unit)))
+        return written(f"{number:f}")
+    entry = node.entry
+    own = entry.get("typed", "") if node.kind == GIVEN else entry["printed"].get("result", "")
+    return written(str(own))
 
 
 def _mistyped(line: Line, target: str, name: str, typed: str, number: str) -> str:
