@@ -96,13 +96,13 @@ def measured(numbers: Iterable[int], seed: int = 0) -> tuple[Tally, Tally]:
     return full, quick
 
 
-def _judged(graph: Graph, claims: Iterable[Claim]) -> dict[str, Judged]:
+def said_of(graph: Graph, claims: Iterable[Claim]) -> dict[str, Judged]:
     return {found.id: found for found in judge(graph, list(claims), find_slips)}
 
 
 def _count_full(tally: Tally, number: int, sheet: Sheet) -> None:
     claims = sheet.claims()
-    said = _judged(sheet.graph, claims.values())
+    said = said_of(sheet.graph, claims.values())
     for slip in sheet.planted:
         if not slip.beyond:
             continue
@@ -142,7 +142,7 @@ def _count_told(tally: Tally, kind: str, place: int | None, what: str, judged: J
 
 def _count_quick(tally: Tally, number: int, graph: Graph, table: Quick) -> None:
     slip, claims = table.slip, table.claims
-    said = _judged(graph, claims.values())
+    said = said_of(graph, claims.values())
     tally.claims += len(claims)
     what = f"beam {number}, quick, {slip.kind}: {slip.id} worked as {slip.what}: "
     if table.shows_at:

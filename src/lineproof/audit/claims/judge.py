@@ -12,6 +12,7 @@ from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
+from lineproof.audit.claims.rewritten import claimed_above, used_as_written, worked_rightly
 from lineproof.audit.claims.safe_side import errs_safely
 from lineproof.audit.claims.twins import twins_of
 from lineproof.audit.claims.worlds import Worlds, unmoved_lines
@@ -24,6 +25,8 @@ SlipFinder = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]
 
 WRONG = (Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN)
 """Verdicts whose values make those below carry something that is not right."""
+MISWRITTEN = (Verdict.ORIGIN, Verdict.UNIT)
+"""Verdicts on lines that may have been written wrongly and used rightly."""
 _DIGITS = 4
 _MOVED = 1e-9
 
@@ -34,9 +37,10 @@ def judge(
     """Return a judgement per claim and per value that nobody claimed, in the order of the record.
 
     A claim is compared with what follows from the values that the claim itself uses. Where it
-    does not follow, three more readings are tried before it is called an origin: that later
+    does not follow, four more readings are tried before it is called an origin: that later
     lines were worked from right values, though a claimed one is wrong; that a value which stands
-    in several parts was changed in all; and another way, a unit or a rounding. ``find`` looks for
+    in several parts was changed in all; that a value above was written wrongly and used rightly;
+    and another way, a unit or a rounding. ``find`` looks for
     the slip behind an origin; where a likely one gives what another way or a rounding gives as
     well, the line is doubtful. Moments claimed in another sign convention are read in the calc's
     own signs, and keep what was typed.
@@ -75,6 +79,7 @@ class _Judge:
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
         self.turned: dict[str, list[str]] = {}
+        self.as_written: dict[str, bool] = {}
 
     def all(self) -> Iterator[Judged]:
         for node in self.graph:
@@ -121,7 +126,9 @@ class _Judge:
         right = self.graph.stored[claim.id]
         if not self.graph[claim.id].is_computed:
             return Form(right)
-        return Form(right, {claim.id: claim.stands_for.half})
+        # With as many digits as were written: 20 000 for 20 leaves 0.05 open there, and not 50.
+        size = abs(right / claim.value) if claim.value else 1.0
+        return Form(right, {claim.id: claim.stands_for.half * size})
 
     # -- verdicts --------------------------------------------------------------------------
 
@@ -162,6 +169,9 @@ class _Judge:
             return replace(made, verdict=Verdict.UNKNOWN, note=note)
         if by_used or stands.meets(worlds.twin.follows[node.id].interval):
             return self._carried(node, made)
+        miswritten = self._miswritten(node, claim)
+        if miswritten:
+            return self._worked_rightly(node, made, miswritten)
         return self._unexplained(node, claim, made)
 
     def _right_alone(self, node: Node, claim: Claim, made: Judged) -> Judged:
@@ -188,6 +198,31 @@ class _Judge:
             return replace(made, verdict=Verdict.CARRIED, note=note, causes=wrong)
         note = f"follows from {self._named(causes)} as claimed" if causes else ""
         return replace(made, note=note, causes=causes)
+
+    def _miswritten(self, node: Node, claim: Claim) -> tuple[str, ...]:
+        """Return the wrong lines above that were written wrongly, if a line was worked rightly."""
+        wrong = [
+            i
+            for i in claimed_above(self.graph, node, self.claims)
+            if self.verdicts.get(i) in MISWRITTEN and self.graph[i].is_computed
+        ]
+        for i in wrong:
+            if i not in self.as_written:
+                self.as_written[i] = used_as_written(self.benches[0], i)
+        wrong = [i for i in wrong if not self.as_written[i]]
+        return worked_rightly(self.benches[0], node, claim, wrong)
+
+    def _worked_rightly(self, node: Node, made: Judged, miswritten: tuple[str, ...]) -> Judged:
+        """Judge a line that follows from what lines above should be, not from them as claimed."""
+        found = set(self._causes(node)) - set(miswritten)
+        found = found.union(*(self._causes(self.graph[i]) for i in miswritten))
+        causes = tuple(i for i in self.claims if i in found)
+        wrong = tuple(i for i in causes if self.verdicts[i] in WRONG)
+        note = f"follows from what {self._named(miswritten)} should be, not from it as claimed"
+        if not wrong:
+            return replace(made, note=note, causes=causes)
+        note = f"{note}; carries {self._named(wrong)}"
+        return replace(made, verdict=Verdict.CARRIED, note=note, causes=wrong)
 
     def _unexplained(self, node: Node, claim: Claim, made: Judged) -> Judged:
         around = [made.follows, self.worlds.sound.follows[node.id].interval]

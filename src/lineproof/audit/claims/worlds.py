@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Container, Mapping
 from dataclasses import dataclass
 
 from lineproof.audit.claims.propagate import World
@@ -32,7 +32,7 @@ def unmoved_lines(
     for claim in claims.values():
         if graph[claim.id].is_computed or claim.stands_for.holds(graph.stored[claim.id]):
             continue
-        lines = [i for i in _next_claimed(graph, claim.id, claims) if _is_moved(i, worlds)]
+        lines = [i for i in next_claimed(graph, claim.id, claims) if _is_moved(i, worlds)]
         follow = [i for i in lines if _follows(claims[i], worlds)]
         if follow or len(lines) == 1 or _is_count(graph[claim.id]):
             for entry_id in lines:
@@ -45,7 +45,7 @@ def _is_count(node: Node) -> bool:
     return not node.unit and node.symbol.startswith("n_") and node.stored == int(node.stored)
 
 
-def _next_claimed(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> list[str]:
+def next_claimed(graph: Graph, entry_id: str, claims: Container[str]) -> list[str]:
     """Return the claimed lines that rest on one by lines that nobody claimed."""
     waiting, found = [entry_id], list[str]()
     seen: set[str] = set()
