@@ -7,10 +7,12 @@ import pytest
 from lineproof.audit.effects import (
     CLAIMED,
     DRAWN,
+    RECORDED,
     effects_of,
     effects_of_right,
     place_of,
     turned_decisions,
+    turned_sentence,
 )
 from lineproof.audit.graph import Graph
 from lineproof.formula import criterion
@@ -137,6 +139,39 @@ def test_a_check_that_cannot_be_worked_is_told() -> None:
 def test_a_decision_that_turns_is_named(graph: Graph) -> None:
     assert turned_decisions(graph, {"sag-2/A_s": 700.0}) == ("sag-2/least",)
     assert turned_decisions(graph, {"sag-2/A_s": 900.0}) == ()
+
+
+def test_the_sentence_on_a_decision_that_turns_names_the_branch_recorded(graph: Graph) -> None:
+    """A_s 1000 <= 800 does not hold in the calc; with 700 it would, with 900 it does not."""
+    assert turned_sentence(graph, {"sag-2/A_s": 900.0}) == ""
+    assert turned_sentence(graph, {"sag-2/A_s": 700.0}) == (
+        "As claimed, the decision only the least steel, span 2, 2.5, would turn: A_s <= A_smin "
+        "would hold: effects are told along the recorded branch only, the lines of the other are "
+        "not in the calc."
+    )
+    assert turned_sentence(graph, {"sag-2/A_s": 700.0}, DRAWN).startswith("As drawn, the decision")
+    assert turned_sentence(graph, {"sag-2/A_s": 700.0}, RECORDED).startswith("Put right, the")
+
+
+def test_a_decision_says_what_was_concluded_and_many_are_counted() -> None:
+    """a = 90 turns a <= 80, a <= 85 and a <= 88, of which two are named."""
+    sheet = Sheet("B2")
+    with sheet.part("block", "Span 1: block"):
+        sheet.given("a", "60 mm", "depth of the block")
+        for number, limit in enumerate((80, 85, 88), 1):
+            test = criterion(
+                f"a <= {limit}", title="Where the block ends", numbers={str(limit): "mm"},
+                yes="The block lies in the flange.", no="The block reaches the web.",
+            )  # fmt: skip
+            sheet.decide(test, key=f"flange-{number}")
+
+    said = turned_sentence(Graph(sheet.close()), {"block/a": 90.0})
+
+    assert said.startswith(
+        "As claimed, the decision where the block ends, span 1, 1.2, would turn: a <= 80 would not "
+        'hold (recorded: "The block lies in the flange."); the decision'
+    )
+    assert "; and 1 more decision turns: effects" in said
 
 
 @pytest.mark.parametrize(

@@ -111,6 +111,15 @@ def test_a_finding_that_changes_no_check_says_so() -> None:
     assert "No check" not in said["beam/d"]
 
 
+def test_a_finding_says_where_a_wrong_value_turns_a_decision() -> None:
+    """a = 65 <= h_f = 100 in the calc; 110 is claimed: M_r was worked by the branch recorded."""
+    (finding,) = found(beam("a <= h_f"), {"beam/a": "110"})
+    assert "As claimed, the decision which branch, span 1, 3.1, would turn: a <= h_f" in (
+        finding.advice
+    )
+    assert "As claimed" not in found(beam("a <= h_f"), {"beam/a": "76.4"})[0].advice
+
+
 def test_lambda_is_written_without_the_underscore_of_its_formula() -> None:
     """lambda_ 0.75 left out of 10 x 0.75: the claim is 10."""
     sheet = hand.sheet_of({}, {"k": "10 mm", "lambda_": "0.75"})

@@ -15,6 +15,8 @@ from lineproof.record.entry import DECISION
 UNSEEN = 0.0005
 """A change of utilisation up to this is none: it would print as the same number."""
 _DIGITS = (2, 3, 4, 6)
+_MOST_TURNED = 2
+"""So many decisions that turn are named in a sentence; the others are counted."""
 _PLACE = re.compile(r"\b(?:span|support)s? \d.*", re.IGNORECASE)
 
 
@@ -90,6 +92,37 @@ def turned_decisions(graph: Graph, changed: Mapping[str, float]) -> tuple[str, .
         and node.id in truths
         and truths[node.id].holds != graph.truth(node.id).holds
     )
+
+
+def turned_sentence(graph: Graph, changed: Mapping[str, float], told: Told = CLAIMED) -> str:
+    """Return the sentence on decisions that changed values turn; nothing where none does.
+
+    The calc holds the lines of the branch taken alone, so that no effect of the other is known.
+    """
+    turned = [graph[i] for i in turned_decisions(graph, changed)]
+    if not turned:
+        return ""
+    titles = _titles(graph)
+    called = told.right if told is RECORDED else told.claimed
+    said = [_turn(node, titles) for node in turned[:_MOST_TURNED]]
+    more = len(turned) - _MOST_TURNED
+    word = "decision turns" if more == 1 else "decisions turn"
+    others = f"; and {more} more {word}" if more > 0 else ""
+    return (
+        f"{called[:1].upper()}{called[1:]}, {'; '.join(said)}{others}: effects are told along the "
+        "recorded branch only, the lines of the other are not in the calc."
+    )
+
+
+def _turn(node: Node, titles: Mapping[str, str]) -> str:
+    state = "would not hold" if node.entry["holds"] else "would hold"
+    conclusion = str(node.entry.get("conclusion", ""))
+    recorded = f' (recorded: "{conclusion}")' if conclusion else ""
+    title = f"{node.title[:1].lower()}{node.title[1:]}" or node.id
+    place = place_of(titles[node.part])
+    label = f", {node.label}" if node.label else ""
+    formula = node.entry["formula"]
+    return f"the decision {title}, {place}{label}, would turn: {formula} {state}{recorded}"
 
 
 def place_of(title: str) -> str:

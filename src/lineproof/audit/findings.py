@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from dataclasses import replace
 
 from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdict
-from lineproof.audit.effects import effects_of, named_line
+from lineproof.audit.effects import effects_of, named_line, turned_sentence
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.search import none_fits
 
@@ -34,8 +34,10 @@ def findings_of(graph: Graph, judged: Sequence[Judged]) -> tuple[Finding, ...]:
         effects: tuple[Effect, ...] = ()
         advice = _advice(graph, each)
         if len(found) < _MOST_EFFECTS:
-            effects = effects_of(graph, {each.id: each.claim.value})
-            advice = advice if effects else f"{advice} {_NO_CHECK}".lstrip()
+            changed = {each.id: each.claim.value}
+            effects = effects_of(graph, changed)
+            said = (advice, "" if effects else _NO_CHECK, turned_sentence(graph, changed))
+            advice = " ".join(filter(None, said))
         made = _finding(graph, each, each.claim, effects, carried.get(each.id, []))
         found.append(replace(made, advice=advice))
     return tuple(sorted(found, key=importance))

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 
 from lineproof.audit.claims.tables import Row
 from lineproof.audit.data import Effect, Finding, Severity
-from lineproof.audit.effects import DRAWN, effects_of
+from lineproof.audit.effects import DRAWN, effects_of, turned_sentence
 from lineproof.audit.graph import Graph
 from lineproof.audit.search.drawing_rows import (
     BARS_ITEM,
@@ -251,7 +251,7 @@ def _compared(graph: Graph, item: Item, drawn: Drawn) -> Iterator[Finding]:
         f"{_where(drawn)}.",
         item.ids,
         CLAUSES.get(item.name, _SECTION),
-        _advice(item, harmless=severity == Severity.OBSERVATION),
+        _advice(item, graph, changes, harmless=severity == Severity.OBSERVATION),
         effects,
     )
 
@@ -264,7 +264,12 @@ def _severity(item: Item, effects: Sequence[Effect], *, worse: bool) -> Severity
     return Severity.OBSERVATION
 
 
-def _advice(item: Item, *, harmless: bool) -> str:
+def _advice(item: Item, graph: Graph, changes: Mapping[str, float], *, harmless: bool) -> str:
+    said = (_what_to_do(item, harmless=harmless), turned_sentence(graph, changes, DRAWN))
+    return " ".join(filter(None, said))
+
+
+def _what_to_do(item: Item, *, harmless: bool) -> str:
     if harmless:
         return "On the safe side by itself: see that it fits, and change calc or drawing."
     shared = " The effects take the drawn bars as shared like the calc's." * (

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 
 from lineproof.audit.data import Effect, Finding, Severity
-from lineproof.audit.effects import effects_of_right
+from lineproof.audit.effects import RECORDED, effects_of_right, turned_sentence
 from lineproof.audit.search import (
     traps_calc,
     traps_laid,
@@ -80,13 +80,14 @@ def _finding(view: View, caught: Caught | Remark) -> Finding:
             SOURCE, caught.severity, f"{caught.what}.", caught.ids, caught.clause, caught.advice
         )
     effects = effects_of_right(view.graph, caught.right) if caught.right else ()
+    turned = turned_sentence(view.graph, caught.right, RECORDED) if caught.right else ""
     return Finding(
         SOURCE,
         _severity(caught.severity, effects),
         f"{view.name(caught.node)}: {caught.what}.",
         (caught.node.id,),
         caught.clause or str(caught.node.entry.get("clause", "")),
-        caught.advice,
+        f"{caught.advice} {turned}".strip(),
         effects,
     )
 
