@@ -145,6 +145,27 @@ def test_a_length_that_is_set_out_is_rounded_to_25_mm() -> None:
     assert said == {"beam/l_d": Verdict.SAFE_ROUNDING, "beam/d_v": Verdict.ORIGIN}
 
 
+def test_areas_and_deflections_are_not_rounded_as_sizes_are() -> None:
+    """A_s 3 x 304 = 912: 910 is a digit less, 925 on a step of 25 is nothing.
+
+    delta_L = 0.35 x 3.25 = 1.1375 mm: 1.13 is cut off, 1.15 on a step of 0.05 is nothing.
+    """
+    lines = {"A_s = n_b*A_b": "mm2", "delta_L = k_1*a": "mm"}
+    givens = {"n_b": "3", "A_b": "304 mm2", "k_1": "0.35", "a": "3.25 mm"}
+    record = sheet_of(lines, givens).close()
+    cases = {
+        ("A_s", "910"): Verdict.SAFE_ROUNDING,
+        ("A_s", "925"): Verdict.ORIGIN,
+        ("delta_L", "1.13"): Verdict.SAFE_ROUNDING,
+        ("delta_L", "1.15"): Verdict.ORIGIN,
+    }
+    found = {
+        (symbol, text): said_of(record, {f"beam/{symbol}": text}, f"beam/{symbol}", None)[0]
+        for symbol, text in cases
+    }
+    assert found == cases
+
+
 def test_a_zero_written_behind_the_point_was_worked_out() -> None:
     """M_r 206.64: 207.0 says 206.95 to 207.05, so that it is no rounding to 1 kN.m."""
     exact = {"beam/d": "538.95", "beam/a": "64.979"}

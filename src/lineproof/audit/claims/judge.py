@@ -170,7 +170,7 @@ class _Judge:
         if by_used or stands.meets(worlds.twin.follows[node.id].interval):
             return self._carried(node, made)
         miswritten = self._miswritten(node, claim)
-        if miswritten:
+        if miswritten is not None:
             return self._worked_rightly(node, made, miswritten)
         return self._unexplained(node, claim, made)
 
@@ -199,8 +199,8 @@ class _Judge:
         note = f"follows from {self._named(causes)} as claimed" if causes else ""
         return replace(made, note=note, causes=causes)
 
-    def _miswritten(self, node: Node, claim: Claim) -> tuple[str, ...]:
-        """Return the wrong lines above that were written wrongly, if a line was worked rightly."""
+    def _miswritten(self, node: Node, claim: Claim) -> str | None:
+        """Return the wrong line above that was written wrongly, if this one was worked rightly."""
         wrong = [
             i
             for i in claimed_above(self.graph, node, self.claims)
@@ -209,16 +209,15 @@ class _Judge:
         for i in wrong:
             if i not in self.as_written:
                 self.as_written[i] = used_as_written(self.benches[0], i)
-        wrong = [i for i in wrong if not self.as_written[i]]
-        return worked_rightly(self.benches[0], node, claim, wrong)
+        unused = [i for i in wrong if not self.as_written[i]]
+        return worked_rightly(self.benches[0], node, claim, unused)
 
-    def _worked_rightly(self, node: Node, made: Judged, miswritten: tuple[str, ...]) -> Judged:
-        """Judge a line that follows from what lines above should be, not from them as claimed."""
-        found = set(self._causes(node)) - set(miswritten)
-        found = found.union(*(self._causes(self.graph[i]) for i in miswritten))
+    def _worked_rightly(self, node: Node, made: Judged, miswritten: str) -> Judged:
+        """Judge a line that follows from what a line above should be, not from it as claimed."""
+        found = set(self._causes(node)) - {miswritten} | set(self._causes(self.graph[miswritten]))
         causes = tuple(i for i in self.claims if i in found)
         wrong = tuple(i for i in causes if self.verdicts[i] in WRONG)
-        note = f"follows from what {self._named(miswritten)} should be, not from it as claimed"
+        note = f"follows from what {self._named([miswritten])} should be, not from it as claimed"
         if not wrong:
             return replace(made, note=note, causes=causes)
         note = f"{note}; carries {self._named(wrong)}"

@@ -17,8 +17,9 @@ _NEAR_ONE = 3.0
 """Factors nearer to one, such as kip.ft for kN.m, are too easily met by chance."""
 _DIGIT_LESS = (10,)
 """Steps in units of the last digit that write one digit less: any number is rounded so."""
-_BUILT = {"length": (5, 10), "area": (5, 10, 25, 50, 100)}
-"""Steps for sizes and areas."""
+_BUILT = (5, 10)
+"""Steps for sizes and areas; a size is in whole millimetres, a deflection to a tenth is none."""
+_SIZE = 1.0
 _LAID_OUT = ("s", "l", "x", "b", "h")
 _SET_OUT = (5, 10, 25, 50, 100)
 """Steps for lengths that are set out on a drawing, by the first letters of their symbols.
@@ -101,9 +102,10 @@ def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:
     if "." in digits and digits.endswith("0"):
         return ()
     kind = UNITS[claim.unit].kind
-    if kind == "length" and symbol.startswith(_LAID_OUT):
+    is_size = kind == "length" and 2 * claim.stands_for.half >= _SIZE * (1 - 1e-9)
+    if is_size and symbol.startswith(_LAID_OUT):
         return _SET_OUT
-    return _BUILT.get(kind, _DIGIT_LESS)
+    return _BUILT if is_size or kind == "area" else _DIGIT_LESS
 
 
 def _plain(step: Decimal) -> str:

@@ -7,8 +7,7 @@ but what follows for the line from the values claimed.
 
 from __future__ import annotations
 
-from collections.abc import Container, Iterator, Sequence
-from itertools import combinations
+from collections.abc import Container, Iterable, Iterator
 
 from lineproof.audit.claims.other_methods import Bench
 from lineproof.audit.claims.worlds import next_claimed
@@ -16,8 +15,6 @@ from lineproof.audit.data import Claim
 from lineproof.audit.graph import Graph, Node
 from lineproof.errors import UserError
 
-MOST = 4
-"""So many wrong lines next above a line are tried, in every selection."""
 _CANNOT = (ArithmeticError, ValueError, TypeError, UserError)
 
 
@@ -53,20 +50,18 @@ def used_as_written(bench: Bench, entry_id: str) -> bool:
     return False
 
 
-def worked_rightly(bench: Bench, node: Node, claim: Claim, wrong: Sequence[str]) -> tuple[str, ...]:
-    """Return the wrong lines above that a claim follows from once they are what should follow.
+def worked_rightly(bench: Bench, node: Node, claim: Claim, wrong: Iterable[str]) -> str | None:
+    """Return the wrong line above that a claim follows from once it is what should follow there.
 
-    ``wrong`` are claimed lines next above that do not follow from their own values. As few as
-    will do are put right; none are returned where no selection of them gives the claim.
+    ``wrong`` are claimed lines next above that do not follow from their own values. One alone is
+    taken: of two that were both written wrongly and both used rightly, by chance some would fit.
     """
-    follows = bench.world.follows
-    for count in range(1, min(len(wrong), MOST) + 1):
-        for chosen in combinations(wrong[:MOST], count):
-            swapped = {i: follows[i] for i in chosen}
-            try:
-                made = bench.reworked(node, swapped)
-            except _CANNOT:
-                continue
-            if claim.stands_for.meets(made.interval):
-                return chosen
-    return ()
+    for entry_id in wrong:
+        swapped = {entry_id: bench.world.follows[entry_id]}
+        try:
+            made = bench.reworked(node, swapped)
+        except _CANNOT:
+            continue
+        if claim.stands_for.meets(made.interval):
+            return entry_id
+    return None
