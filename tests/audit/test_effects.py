@@ -145,12 +145,14 @@ def test_the_sentence_on_a_decision_that_turns_names_the_branch_recorded(graph: 
     """A_s 1000 <= 800 does not hold in the calc; with 700 it would, with 900 it does not."""
     assert turned_sentence(graph, {"sag-2/A_s": 900.0}) == ""
     assert turned_sentence(graph, {"sag-2/A_s": 700.0}) == (
-        "As claimed, the decision only the least steel, span 2, 2.5, would turn: A_s <= A_smin "
-        "would hold: effects are told along the recorded branch only, the lines of the other are "
-        "not in the calc."
+        "As claimed, a decision of the calc would turn: Only the least steel, span 2 (2.5), where "
+        "A_s <= A_smin would hold. Effects are told along the recorded branch only; the lines of "
+        "the other are not in the calc."
     )
-    assert turned_sentence(graph, {"sag-2/A_s": 700.0}, DRAWN).startswith("As drawn, the decision")
-    assert turned_sentence(graph, {"sag-2/A_s": 700.0}, RECORDED).startswith("Put right, the")
+    assert turned_sentence(graph, {"sag-2/A_s": 700.0}, DRAWN).startswith("As drawn, a decision")
+    assert turned_sentence(graph, {"sag-2/A_s": 700.0}, RECORDED).startswith(
+        "Put right, a decision"
+    )
 
 
 def test_a_decision_says_what_was_concluded_and_many_are_counted() -> None:
@@ -168,10 +170,10 @@ def test_a_decision_says_what_was_concluded_and_many_are_counted() -> None:
     said = turned_sentence(Graph(sheet.close()), {"block/a": 90.0})
 
     assert said.startswith(
-        "As claimed, the decision where the block ends, span 1, 1.2, would turn: a <= 80 would not "
-        'hold (recorded: "The block lies in the flange."); the decision'
+        "As claimed, 3 decisions of the calc would turn: Where the block ends, span 1 (1.2), where "
+        'a <= 80 would not hold (recorded: "The block lies in the flange."); Where the block ends'
     )
-    assert "; and 1 more decision turns: effects" in said
+    assert "; and 1 more. Effects are told" in said
 
 
 @pytest.mark.parametrize(

@@ -114,7 +114,7 @@ def test_a_finding_that_changes_no_check_says_so() -> None:
 def test_a_finding_says_where_a_wrong_value_turns_a_decision() -> None:
     """a = 65 <= h_f = 100 in the calc; 110 is claimed: M_r was worked by the branch recorded."""
     (finding,) = found(beam("a <= h_f"), {"beam/a": "110"})
-    assert "As claimed, the decision which branch, span 1, 3.1, would turn: a <= h_f" in (
+    assert "would turn: Which branch, span 1 (3.1), where a <= h_f would not hold." in (
         finding.advice
     )
     assert "As claimed" not in found(beam("a <= h_f"), {"beam/a": "76.4"})[0].advice

@@ -106,11 +106,12 @@ def turned_sentence(graph: Graph, changed: Mapping[str, float], told: Told = CLA
     called = told.right if told is RECORDED else told.claimed
     said = [_turn(node, titles) for node in turned[:_MOST_TURNED]]
     more = len(turned) - _MOST_TURNED
-    word = "decision turns" if more == 1 else "decisions turn"
-    others = f"; and {more} more {word}" if more > 0 else ""
+    said += [f"and {more} more"] if more > 0 else []
+    what = "a decision" if len(turned) == 1 else f"{len(turned)} decisions"
     return (
-        f"{called[:1].upper()}{called[1:]}, {'; '.join(said)}{others}: effects are told along the "
-        "recorded branch only, the lines of the other are not in the calc."
+        f"{called[:1].upper()}{called[1:]}, {what} of the calc would turn: {'; '.join(said)}. "
+        "Effects are told along the recorded branch only; the lines of the other are not in the "
+        "calc."
     )
 
 
@@ -118,11 +119,7 @@ def _turn(node: Node, titles: Mapping[str, str]) -> str:
     state = "would not hold" if node.entry["holds"] else "would hold"
     conclusion = str(node.entry.get("conclusion", ""))
     recorded = f' (recorded: "{conclusion}")' if conclusion else ""
-    title = f"{node.title[:1].lower()}{node.title[1:]}" or node.id
-    place = place_of(titles[node.part])
-    label = f", {node.label}" if node.label else ""
-    formula = node.entry["formula"]
-    return f"the decision {title}, {place}{label}, would turn: {formula} {state}{recorded}"
+    return f"{_name(node, titles)}, where {node.entry['formula']} {state}{recorded}"
 
 
 def place_of(title: str) -> str:
