@@ -109,7 +109,7 @@ def test_an_error_beside_the_convention_is_still_found() -> None:
 
     (finding,) = audit_claims(graph.record, claims, graph).findings
     assert finding.ids[0] == wrong
-    assert f"{half} kN.m does not follow" in finding.what
+    assert f"{half} kN·m does not follow" in finding.what
 
 
 def test_hogging_moments_written_negative_are_a_kind_of_their_own() -> None:

@@ -36,7 +36,7 @@ def test_an_origin_is_one_finding_with_the_lines_that_carry_it() -> None:
     (finding,) = found(beam(), {"beam/A_s": "900", "strength/M_r": "157.5"})
     assert finding.ids == ("beam/A_s", "strength/M_r")
     assert finding.what.endswith(
-        "900 mm2 does not follow from the values that the claim uses; 1200 mm2 does; "
+        "900 mm² does not follow from the values that the claim uses; 1200 mm² does; "
         "1 claimed line carries it"
     )
     assert finding.severity is Severity.MAJOR
@@ -87,13 +87,13 @@ def test_of_equal_severity_what_turns_a_check_comes_before_what_only_moves_one()
 def test_a_line_not_changed_with_its_input_says_so() -> None:
     said = found(beam(), {"given/n_b": "5", "beam/A_s": "1200"})
     assert [f.ids[0] for f in said] == ["given/n_b", "beam/A_s"]
-    assert "1200 mm2 does not follow from the values that the claim uses" in said[1].what
-    assert "1500 mm2 does, and 1200 mm2 is right; it is the value for other inputs" in said[1].what
+    assert "1200 mm² does not follow from the values that the claim uses" in said[1].what
+    assert "1500 mm² does, and 1200 mm² is right; it is the value for other inputs" in said[1].what
 
 
 def test_a_slip_of_units_is_told_as_one() -> None:
     (finding,) = found(beam(), {"strength/M_f": "180 N.mm"})
-    assert "180 N.mm claimed; reproduced exactly with N.mm in place of kN.m" in finding.what
+    assert "180 N·mm claimed; reproduced exactly with N·mm in place of kN·m" in finding.what
 
 
 def test_a_finding_names_the_page_of_the_others_calculation() -> None:
@@ -101,7 +101,7 @@ def test_a_finding_names_the_page_of_the_others_calculation() -> None:
     graph = Graph(beam())
     claim = replace(typed(graph, "strength/M_r", "231.5"), where="p. 3")
     (finding,) = audit_claims(graph.record, [claim], graph).findings
-    assert ": 231.5 kN.m (p. 3) does not follow from" in finding.what
+    assert ": 231.5 kN·m (p. 3) does not follow from" in finding.what
 
 
 def test_a_finding_that_changes_no_check_says_so() -> None:

@@ -146,7 +146,7 @@ def test_the_slip_finder_is_asked_for_origins_alone(record: Record) -> None:
 @pytest.mark.parametrize(
     ("claims", "line", "words"),
     [
-        ({"strength/M_f": "180 N.mm"}, "strength/M_f", "N.mm in place of kN.m"),
+        ({"strength/M_f": "180 N.mm"}, "strength/M_f", "N·mm in place of kN·m"),
         ({"strength/M_r": "20.7"}, "strength/M_r", "10 times too small"),
         ({"beam/d": "0.539"}, "beam/d", "mm in place of m"),
         ({"beam/d": "21.2"}, "beam/d", "mm in place of in"),

@@ -98,8 +98,8 @@ def test_the_first_wrong_line_is_told_with_what_it_carries() -> None:
     assert found[0].severity is Severity.CRITICAL
     assert found[0].ids[0] == "sag-1/A_s"
     assert "sag-1/M_r" in found[0].ids
-    assert "1234 mm2" in found[0].what
-    assert "1500 mm2" in found[0].what
+    assert "1234 mm²" in found[0].what
+    assert "1500 mm²" in found[0].what
 
 
 def test_a_wrong_line_in_a_chain_is_one_origin() -> None:

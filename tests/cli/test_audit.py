@@ -66,7 +66,7 @@ def test_an_origin_with_slip_effects_and_what_carries_it(
     assert "1 finding" in said.splitlines()
     assert "major" in said.splitlines()
     assert "strength/M_r: " in said
-    assert "231.5 kN.m does not follow from the values that the claim uses; 206.7 kN.m does" in said
+    assert "231.5 kN·m does not follow from the values that the claim uses; 206.7 kN·m does" in said
     assert "h (1." in said  # the slip finder's sentence names h
     assert "utilisation from 0.78 as claimed to 0.87 with the right value, still holds" in said
 

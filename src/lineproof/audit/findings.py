@@ -9,6 +9,7 @@ from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdi
 from lineproof.audit.effects import effects_of, named_line, turned_sentence
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.search import none_fits
+from lineproof.typeset.values import told
 
 SOURCE = "claims"
 FOUND = (
@@ -141,7 +142,7 @@ def _words(node: Node, judged: Judged, claim: Claim) -> str:
 
 def as_typed(claim: Claim) -> str:
     """Return a claimed number with its unit."""
-    return f"{claim.typed} {claim.unit}".rstrip()
+    return told(claim.typed, claim.unit)
 
 
 def cited(claim: Claim) -> str:
@@ -151,4 +152,4 @@ def cited(claim: Claim) -> str:
 
 def shown(node: Node, value: float) -> str:
     """Return a value of a line in its printed unit, to four digits."""
-    return f"{node.number_text(value)} {node.unit}".rstrip()
+    return told(node.number_text(value), node.unit)

@@ -134,6 +134,16 @@ def value_text(text: str, unit: str) -> str:
     return number_text(text) + space + unit_text(unit)
 
 
+def told(text: str, unit: str) -> str:
+    """Return number and unit for a sentence that is also told in a terminal, digits as they stand.
+
+    >>> told("12500", "kN.m"), told("35", "deg"), told("4", "")
+    ('12500 kN·m', '35°', '4')
+    """
+    space = "" if unit in ("", "deg") else " "
+    return text + space + unit_text(unit)
+
+
 def symbol_of(symbol_id: str, notation: Notation) -> Symbol:
     """Return a symbol of the notation, or one made from its id."""
     found = notation.get(symbol_id)

@@ -19,6 +19,7 @@ from lineproof.audit.claims.worlds import Worlds, unmoved_lines
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
 from lineproof.record.entry import DECISION
+from lineproof.typeset.values import told
 
 SlipFinder = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
 """Looks for the slip behind a claim: graph, line, values used, claim, and the claimed ids."""
@@ -270,7 +271,7 @@ class _Judge:
     ) -> Judged:
         way = "up" if rounded.up else "down"
         shown = self._shown(node, rounded.of, _DIGITS + 1)
-        note = f"{shown} rounded {way} to a step of {rounded.step} {claim.unit}".rstrip()
+        note = f"{shown} rounded {way} to a step of {told(rounded.step, claim.unit)}"
         verdict = Verdict.SAFE_ROUNDING if safe else Verdict.UNSAFE_ROUNDING
         said = "conservative" if safe else "not conservative"
         return self._beside_a_slip(
@@ -318,4 +319,4 @@ class _Judge:
         return ", ".join(f"{self.graph[i].symbol} ({self.graph[i].label})" for i in ids)
 
     def _shown(self, node: Node, value: float, digits: int = _DIGITS) -> str:
-        return f"{node.number_text(value, digits)} {node.unit}".rstrip()
+        return told(node.number_text(value, digits), node.unit)

@@ -9,6 +9,7 @@ from decimal import Decimal
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.quantity.digits import number_text, significant
 from lineproof.quantity.units import UNITS, internal_factor, units_of_kind
+from lineproof.typeset.values import unit_text
 
 _MOST_POWER = 9
 _SHARP = 0.02
@@ -53,7 +54,8 @@ def _factors(claim: Claim) -> Iterator[tuple[float, str]]:
     for other in units_of_kind(kind):
         factor = mine / internal_factor(other)
         if not 1 / _NEAR_ONE < factor < _NEAR_ONE:
-            yield factor, f"reproduced exactly with {claim.unit} in place of {other}"
+            given, right = unit_text(claim.unit), unit_text(other)
+            yield factor, f"reproduced exactly with {given} in place of {right}"
     for power in range(1, _MOST_POWER + 1):
         yield 10.0**power, f"reproduced exactly {10**power:,} times too large".replace(",", " ")
         yield 10.0**-power, f"reproduced exactly {10**power:,} times too small".replace(",", " ")

@@ -16,6 +16,7 @@ from lineproof.record.printed_checks import rounds_to
 from lineproof.record.procedures import recall
 from lineproof.record.recompute import Difference, close, recompute
 from lineproof.standards.catalogue import tables
+from lineproof.typeset.values import told
 
 _COMPARED = ("left side", "right side", "truth")
 
@@ -102,8 +103,7 @@ def _not_known(nodes: list[Node]) -> Finding:
 
 
 def _origin(node: Node, difference: Difference, users: list[str], carried: list[str]) -> Finding:
-    unit = f" {node.unit}".rstrip()
-    stored = f"{node.entry['value']:.10g}{unit}"
+    stored = told(f"{node.entry['value']:.10g}", node.unit)
     follows = f"; {listed(carried)} follow from it" if carried else ""
     if users:
         follows += f"; {listed(users)} {'was' if len(users) == 1 else 'were'} worked with another"
@@ -118,7 +118,7 @@ def _origin(node: Node, difference: Difference, users: list[str], carried: list[
             advice="work the line by hand, or with the version that made the record",
         )
     source = {GIVEN: "was typed", LOOKUP: "is printed"}.get(node.kind)
-    gives += unit
+    gives = told(gives, node.unit)
     why = f"{gives} {source}" if source else f"its formula and the values that it uses give {gives}"
     return finding(
         Severity.CRITICAL,
@@ -230,8 +230,8 @@ def _lookups(graph: Graph) -> Iterator[Finding]:
             there = f"the table has {listed(n for n, _ in numbers)}" if row else "no such row"
             yield finding(
                 Severity.CRITICAL,
-                f"{name_of(node)}: {node.entry['printed']['result']} {node.unit} is not what the "
-                f"table {table.name!r} holds at {node.entry['row']!r}: {there}".replace("  ", " "),
+                f"{name_of(node)}: {told(node.entry['printed']['result'], node.unit)} is not "
+                f"what the table {table.name!r} holds at {node.entry['row']!r}: {there}",
                 [node.id],
                 str(node.entry["clause"]),
                 "read the table again",

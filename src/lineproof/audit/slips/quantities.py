@@ -11,6 +11,7 @@ from lineproof.audit.slips.kinship import PAIRS, PARTNERS, SERVICE
 from lineproof.audit.slips.scope import is_next
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
+from lineproof.typeset.values import told
 
 
 class Other(NamedTuple):
@@ -37,7 +38,7 @@ def shown(line: Line, entry_id: str, value: float | None = None) -> str:
     unit = line.scope.graph[entry_id].unit
     number = line.pairs[entry_id][0] if value is None else value
     text = rounded_text(number / internal_factor(unit), 4) if number else "0"
-    return f"{text} {unit}".strip()
+    return told(text, unit)
 
 
 def _in_place(line: Line, other: str, target: str, name: str) -> str:
