@@ -66,8 +66,16 @@ def test_no_untouched_line_is_called_wrong(tallies: tuple[Tally, Tally]) -> None
 def test_the_true_slip_is_among_the_first_three(tallies: tuple[Tally, Tally]) -> None:
     full, quick = tallies
 
-    assert full.share_told >= 0.9, full.untold
+    assert full.share_told >= 0.95, full.untold
     assert quick.share_told >= 0.9, quick.untold
+
+
+def test_no_kind_of_slip_is_left_in_the_dark(tallies: tuple[Tally, Tally]) -> None:
+    """The share of a kind told, of those found; a digit misread in an argument is the weakest."""
+    full, _ = tallies
+    shares = {kind: full.told[kind] / full.found[kind] for kind in rows.KINDS}
+
+    assert {kind: share for kind, share in shares.items() if share < 0.75} == {}
 
 
 # The planting itself, by hand ---------------------------------------------------------------------
