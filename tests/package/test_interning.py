@@ -7,7 +7,7 @@ import json
 import pytest
 
 from lineproof.package.environment import Interned, Verbatim, typst_environment
-from lineproof.typeset import value_math
+from lineproof.typeset.nodes import Letter, Root
 
 HOSTILE = '#sys.version #panic(1) $ \\ *b* " {{ 7*7 }} </script>'
 
@@ -22,17 +22,17 @@ def rendered(template: str, **values: object) -> tuple[str, Interned]:
 @pytest.mark.parametrize(
     ("template", "source"),
     [
-        ("#strong({{ u }})", "#strong(t.at(0))"),
-        ("forgotten {{ u }}", "forgotten t.at(0)"),
-        ('#text("{{ u }}")', '#text("t.at(0)")'),
-        ("/* {{ u }} */", "/* t.at(0) */"),
-        ("#{{ u ~ u }}", "#t.at(0)"),
-        ("#{{ [u, u]|join }}", "#t.at(0)"),
-        ("#{{ u|upper }}", "#t.at(0)"),
-        ("{% for i in [u, u] %}#{{ i }}{% endfor %}", "#t.at(0)#t.at(0)"),
-        ("{% set x = u %}#{{ x }}", "#t.at(0)"),
-        ("#{{ 'a#b' }}", "#t.at(0)"),
-        ("{% macro m(x) %}({{ x }}){% endmacro %}#{{ m(u) }}", "#t.at(1)"),
+        ("#strong({{ u }})", "#strong(t.x0)"),
+        ("forgotten {{ u }}", "forgotten t.x0"),
+        ('#text("{{ u }}")', '#text("t.x0")'),
+        ("/* {{ u }} */", "/* t.x0 */"),
+        ("#{{ u ~ u }}", "#t.x0"),
+        ("#{{ [u, u]|join }}", "#t.x0"),
+        ("#{{ u|upper }}", "#t.x0"),
+        ("{% for i in [u, u] %}#{{ i }}{% endfor %}", "#t.x0#t.x0"),
+        ("{% set x = u %}#{{ x }}", "#t.x0"),
+        ("#{{ 'a#b' }}", "#t.x0"),
+        ("{% macro m(x) %}({{ x }}){% endmacro %}#{{ m(u) }}", "#t.x1"),
     ],
 )
 def test_no_position_lets_text_into_the_source(template: str, source: str) -> None:
@@ -56,17 +56,22 @@ def test_a_missing_name_is_refused() -> None:
         rendered("#{{ nothing }}")
 
 
-def test_maths_travels_as_nested_lists() -> None:
-    """A formula becomes data, not source."""
-    made, interned = rendered("#m({{ f }})", f=value_math("5", "mm"))
+def test_maths_travels_as_marks() -> None:
+    """A formula becomes data, not source; what stands twice is stored once."""
+    made, interned = rendered("#m({{ f }}, {{ f }}, {{ g }})", f=Letter("a"), g=Root(Letter("a")))
 
-    assert made == "#m(t.at(0))"
-    assert interned.items == [["row", ["word", "5"], ["unit", "mm"]]]
+    assert made == "#m(t.x1, t.x1, t.x3)"
+    assert interned.items == [
+        ["letter", "a"],
+        ["formula", 0, "a"],
+        ["root", "", 0],
+        ["formula", 2, "sqrt(a)"],
+    ]
 
 
 def test_same_text_has_one_place() -> None:
     """The list holds each text once; verbatim data is not changed."""
     made, interned = rendered("{{ a }}{{ a }}{{ v }}", a="x\x00", v=Verbatim("x\x00"))
 
-    assert made == "t.at(0)t.at(0)t.at(1)"
+    assert made == "t.x0t.x0t.x1"
     assert json.loads(interned.to_json()) == ["x<U+0000>", "x\x00"]

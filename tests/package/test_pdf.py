@@ -145,7 +145,7 @@ HOSTILE = [
     "$ x^2 $ \\ \\frac{a}{b} \\n",
     "*bold* _it_ `raw` = head - item / term @ref <label> // no /* no */",
     "\"quotes\" 'single' {{ 7*7 }} {% raw %} ~ [link](x)",
-    't.at(0) ") + read("/etc/passwd")',
+    't.x0 ") + read("/etc/passwd")',
 ]
 
 

@@ -9,7 +9,17 @@ import pytest
 from lineproof.formula import Notation, Symbol
 from lineproof.formula.grammar import parse_expression
 from lineproof.formula.tree import Binary, Name, Number
-from lineproof.typeset import formula_math, mathml, plain, substitution_math, tex, typst_tree
+from lineproof.typeset import (
+    formula_math,
+    mathml,
+    plain,
+    substitution_math,
+    tex,
+    typst_mark,
+    value_math,
+)
+from lineproof.typeset.nodes import Math
+from lineproof.typeset.typst_mark import TypstMark
 
 NOTATION = Notation([Symbol("f_c", "f", "c", "′")])
 
@@ -129,19 +139,55 @@ def test_substitution_reads_one_way(formula: str, expected: str) -> None:
     assert expected == plain(substitution_math(parse_expression(formula), printed))
 
 
-def test_typst_tree_is_nested_lists_of_texts() -> None:
-    """The Typst tree names each mark by its first text."""
-    tree = typst_tree(formula_math(parse_expression("-f_c/2"), NOTATION))
+def marks_of(math: Math) -> list[TypstMark]:
+    """Return the marks of a formula, those inside a mark before it."""
+    marks: list[TypstMark] = []
 
-    assert tree == [
-        "frac",
-        [
-            "row",
-            ["prefix", "−"],
-            ["scripts", ["row", ["letter", "f"], ["prime"]], ["word", "c"], None],
-        ],
+    def place(node: Math) -> int:
+        mark = typst_mark(node, place)
+        marks.append(mark)
+        return len(marks) - 1
+
+    place(math)
+    return marks
+
+
+def test_typst_marks_are_lists_of_texts_and_places() -> None:
+    """Each mark is named by its first text and made of marks that stand before it."""
+    assert marks_of(formula_math(parse_expression("-f_c/2"), NOTATION)) == [
+        ["prefix", "−"],
+        ["letter", "f"],
+        ["prime"],
+        ["row", 1, 2],
+        ["word", "c"],
+        ["scripts", 3, 4, None],
+        ["row", 0, 5],
         ["word", "2"],
+        ["frac", 6, False, 7, False],
     ]
+
+
+@pytest.mark.parametrize(
+    ("formula", "words"),
+    [
+        # no-break spaces on both sides of signs, narrow ones between thousands
+        ("a*b", ["7\u00a0×\u00a012\u202f500"]),
+        ("a + b - a", ["7\u00a0+\u00a012\u202f500\u00a0−\u00a07"]),
+        ("-a + b", ["−7\u00a0+\u00a012\u202f500"]),
+        ("a*sqrt(b)", ["7", "12\u202f500"]),  # the sign before the root stands alone
+    ],
+)
+def test_typst_sets_stretches_of_numbers_as_one_word(formula: str, words: list[str]) -> None:
+    """Numbers and the signs between them are one text on paper."""
+    math = substitution_math(parse_expression(formula), {"a": "7", "b": "12500"})
+
+    assert [mark[1] for mark in marks_of(math) if mark[0] == "word"] == words
+
+
+def test_typst_sets_a_number_and_its_unit_as_one_word() -> None:
+    """So does the unit after the number, but for degrees without a space."""
+    assert marks_of(value_math("551", "kN.m"))[0] == ["word", "551\u00a0kN·m"]
+    assert marks_of(value_math("-35", "deg"))[0] == ["word", "−35°"]
 
 
 @pytest.mark.parametrize("formula", [*TEX, *PLAIN, *SUBSTITUTION])
@@ -183,4 +229,4 @@ def test_a_fraction_inside_a_fraction_keeps_its_size() -> None:
     math = formula_math(parse_expression("a/(b + c/d)"), NOTATION)
 
     assert '<mrow displaystyle="true" scriptlevel="0">' in mathml(math)
-    assert typst_tree(math)[2][0] == "display"  # type: ignore[index]
+    assert marks_of(math)[-1][::2] == ["frac", False, True]

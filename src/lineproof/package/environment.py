@@ -1,7 +1,7 @@
 """The two jinja2 environments: HTML escapes, Typst interns.
 
-In the Typst template nothing but ``t.at(n)`` is ever written: every text and every maths tree goes
-into one JSON list that Typst reads as data. So no user text can become Typst source.
+In the Typst template nothing but ``t.x7`` is ever written: every text and every mark of a
+formula goes into one JSON list that Typst reads as data. So no user text can become Typst source.
 """
 
 from __future__ import annotations
@@ -17,6 +17,7 @@ from urllib.parse import quote
 
 from lineproof.package.layout import cut, fitted, fitted_result, whole, working_lines
 from lineproof.package.prose import Prose, prose_html, prose_tree
+from lineproof.package.row_heights import row_heights, table_heights
 from lineproof.resources import folder
 from lineproof.typeset.glyphs import printable
 from lineproof.typeset.mathml import mathml
@@ -38,13 +39,15 @@ from lineproof.typeset.nodes import (
 )
 from lineproof.typeset.plain import plain
 from lineproof.typeset.rows import FAILS_WORD, PrintedTable, fails
-from lineproof.typeset.typst_tree import typst_tree
+from lineproof.typeset.typst_mark import typst_mark
 
 if TYPE_CHECKING:
+    from collections.abc import Sequence
+
     import jinja2
 
     from lineproof.package.calc import Calc
-    from lineproof.package.summary import PartSummary
+    from lineproof.package.summary import NotationRow, PartSummary
 
 _NODES = (
     Digits, Fence, Fraction, Letter, Prime, Root, Row, Scripts, Sign, Thin, Unit, Word,
@@ -63,15 +66,17 @@ class Verbatim:
 
 @dataclass
 class Interned:
-    """The texts and trees of one document, in the order of their first use."""
+    """The texts, marks and formulas of one document, each once, what it is made of before it."""
 
     items: list[Any] = field(default_factory=list)
-    places: dict[object, str] = field(default_factory=dict)
+    places: dict[str, str] = field(default_factory=dict)
     texts: dict[str, str] = field(default_factory=dict)
+    marks: dict[Math, int] = field(default_factory=dict)
+    formulas: dict[Math, int] = field(default_factory=dict)
     long_words: bool = False
 
     def place(self, value: object) -> str:
-        """Store a text or tree and return the only thing the template may print: ``t.at(n)``."""
+        """Store a text or formula and return the only thing the template may print: ``t.x7``."""
         if isinstance(value, str):
             known = self.texts.get(value)
             if known is None:
@@ -80,28 +85,41 @@ class Interned:
                 known = self.texts[value] = self._at(text, text)
             return known
         if isinstance(value, _NODES):
-            known = self.places.get(value)  # a symbol stands in many lines
-            if known is None:
-                known = self.places[value] = self._add(typst_tree(value))
-            return known
+            return f"t.x{self._formula(value)}"
         if isinstance(value, Verbatim):
             return self._at(value.text, value.text)
         if isinstance(value, Prose):
-            return self._add([prose_tree(block) for block in value.blocks])
+            tree = ["prose", *(prose_tree(block, self._formula) for block in value.blocks)]
+            return f"t.x{self._add(tree)}"
         msg = (
             f"{type(value).__name__} in the Typst template; only text, maths and prose are printed"
         )
         raise TypeError(msg)
 
+    def _formula(self, math: Math) -> int:
+        """Store a formula with its reading; a symbol stands in many lines, and is stored once."""
+        known = self.formulas.get(math)
+        if known is None:
+            item = ["formula", self._mark(math), plain(math)]
+            known = self.formulas[math] = self._add(item)
+        return known
+
+    def _mark(self, math: Math) -> int:
+        """Store a node after those inside it."""
+        known = self.marks.get(math)
+        if known is None:
+            known = self.marks[math] = self._add(typst_mark(math, self._mark))
+        return known
+
     def _at(self, key: str, item: str) -> str:
         known = self.places.get(key)
         if known is None:
-            known = self.places[key] = self._add(item)
+            known = self.places[key] = f"t.x{self._add(item)}"
         return known
 
-    def _add(self, item: Any) -> str:
+    def _add(self, item: Any) -> int:
         self.items.append(item)
-        return f"t.at({len(self.items) - 1})"
+        return len(self.items) - 1
 
     def to_json(self) -> str:
         """Return the list as ASCII JSON."""
@@ -206,6 +224,9 @@ def _filters() -> dict[str, Any]:
         "short_cells": _short_cells,
         "heading": _heading,
         "text_size": _text_size,
+        "table_heights": table_heights,
+        "notation_heights": _notation_heights,
+        "part_heights": _part_heights,
         "covered_text": lambda item: f"{item.check} ({item.clause})" if item.clause else item.check,
     }
 
@@ -225,6 +246,21 @@ def _heading(math: Math) -> tuple[Math | None, str, str]:
 def _text_size(columns: int) -> str:
     """Return the text size of a table, in points: the more columns, the smaller."""
     return next(size for most, size in _TEXT_SIZES if columns <= most)
+
+
+def _notation_heights(notation: Sequence[NotationRow]) -> str:
+    """Tell which rows of the notation are one line high."""
+    rows = [("", "", ""), *((row.symbol, row.meaning, row.unit) for row in notation)]
+    return row_heights(rows, ("24", "1fr", "24"), 10.0, 3.5)
+
+
+def _part_heights(parts: Sequence[PartSummary]) -> str:
+    """Tell which rows of the checks by part are one line high."""
+    rows = [("Line", "Part", "Check nearest its limit", "Clause", "Ratio", "Checks")]
+    for part in parts:
+        row = part.governing
+        rows.append((row.label, part.group, row.title, row.clause, row.ratio, _checks_text(part)))
+    return row_heights(rows, ("11", "1fr", "1fr", "", "", ""), 8.5, 3.0)
 
 
 def _short_cells(table: PrintedTable) -> bool:

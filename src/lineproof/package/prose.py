@@ -17,8 +17,6 @@ from lineproof.errors import FaultList, UserError
 from lineproof.typeset.glyphs import printable
 from lineproof.typeset.mathml import mathml
 from lineproof.typeset.nodes import Math
-from lineproof.typeset.plain import plain
-from lineproof.typeset.typst_tree import typst_tree
 
 _PLACE = re.compile(r"\{\{(.{0,120}?)\}\}")
 _NAME = re.compile(r"\s*([A-Za-z0-9_./-]+)\s*\Z")
@@ -230,10 +228,14 @@ def _html_table(table: Mark) -> str:
     return f"<table><thead>{head}</thead><tbody>{''.join(body)}</tbody></table>"
 
 
-def prose_tree(mark: Mark) -> list[Any]:
-    """Return a mark as nested lists for the Typst template: kind, text, level, math, children."""
-    math = None if mark.math is None else [typst_tree(mark.math), plain(mark.math)]
+def prose_tree(mark: Mark, place: Callable[[Math], int]) -> list[Any]:
+    """Return a mark as nested lists for the Typst template: kind, text, level, math, children.
+
+    ``place`` tells where a formula stands among the texts and marks of the document.
+    """
+    math = None if mark.math is None else place(mark.math)
     text = mark.text if mark.kind == "listing" else printable(mark.text)
     if mark.kind == "listing":
         text = "\n".join(printable(line) for line in text.split("\n"))
-    return [mark.kind, text, mark.level, math, [prose_tree(child) for child in mark.children]]
+    children = [prose_tree(child, place) for child in mark.children]
+    return [mark.kind, text, mark.level, math, children]

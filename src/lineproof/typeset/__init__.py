@@ -4,7 +4,7 @@ from lineproof.typeset.glyphs import printable
 from lineproof.typeset.mathml import mathml
 from lineproof.typeset.plain import plain
 from lineproof.typeset.tex import tex
-from lineproof.typeset.typst_tree import typst_tree
+from lineproof.typeset.typst_mark import typst_mark
 from lineproof.typeset.values import (
     number_math,
     number_text,
@@ -25,7 +25,7 @@ __all__ = [
     "substitution_math",
     "symbol_math",
     "tex",
-    "typst_tree",
+    "typst_mark",
     "unit_text",
     "value_math",
     "value_text",

@@ -1,6 +1,6 @@
 """The marks on paper: one neutral description of typeset mathematics.
 
-The visitor makes these nodes once; TeX, MathML, the Typst tree and plain text are written from
+The visitor makes these nodes once; TeX, MathML, the marks for Typst and plain text are written from
 them, so no two outputs can disagree about a bracket.
 """
 
