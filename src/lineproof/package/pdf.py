@@ -14,6 +14,7 @@ from typing import TYPE_CHECKING, Any
 from lineproof.errors import UserError
 from lineproof.package.environment import Interned, Verbatim, typst_environment
 from lineproof.package.figures import drawing, paper_width
+from lineproof.package.heap import steady_heap
 from lineproof.package.model import Package
 from lineproof.package.reviewed import REVIEW_MIME, REVIEW_SUFFIX, TALLY_HEADS
 from lineproof.record import MIME
@@ -100,6 +101,7 @@ def _compiler() -> Any:
     if made is None:
         import typst  # noqa: PLC0415 - only printing needs it
 
+        steady_heap()
         made = _local.compiler = typst.Compiler(root=str(_empty_root()), font_paths=_fonts())
     return made
 
