@@ -10,7 +10,7 @@ import pytest
 from lineproof.package.pdf import PrintError, compile_pdf
 from lineproof.package.row_heights import PAPER, row_heights, table_heights, widest
 from lineproof.resources import folder
-from lineproof.typeset.nodes import Letter, Word
+from lineproof.typeset.nodes import Letter, Math, Word
 from lineproof.typeset.rows import PrintedTable
 
 DATE = dt.date(2026, 1, 1)
@@ -70,7 +70,8 @@ def test_columns_as_wide_as_their_texts_share_the_paper() -> None:
 
 def test_what_is_left_goes_to_the_open_column() -> None:
     """174 mm less 24 mm on both sides leave 126 mm, 357 pt, less 7 pt: 53 letters "n"."""
-    rows = [("", "", ""), *((Letter("a"), "n" * count, "mm") for count in (53, 54))]
+    rows: list[tuple[str | Math, ...]] = [("", "", "")]
+    rows += [(Letter("a"), "n" * count, "mm") for count in (53, 54)]
 
     assert PAPER == 174
     assert row_heights(rows, ("24", "1fr", "24"), 10.0, 3.5) == "10"
