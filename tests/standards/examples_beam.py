@@ -39,6 +39,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
         {"b_w": 350, "s_z": 200, "A_ly": 200},
     ),
     "shear.STRAIN_IN_RANGE": ({"eps_x": 0.003}, {"eps_x": 0.0031}),
+    "shear.BARS_IN_RANGE": ({"A_sx": 493.6, "A_s": 500}, {"A_sx": 493.6, "A_s": 0}),
     "shear.DEPTH_WITHOUT_STIRRUPS": ({"h": 750}, {"h": 751}),
     "shear.CLEAR_SPACE": ({"s": 100, "d_bs": 11.3}, {"s": 75, "d_bs": 11.3}),
     "shear_bars.HOOKS_SUFFICE": ({"d_bs": 16}, {"d_bs": 19.5}),
@@ -89,6 +90,8 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     ),
     "deflection_stages.UNCRACKED": ({"M_a": 37, "M_crd": 37.3}, {"M_a": 38, "M_crd": 37.3}),
     "deflection_stages.UNCRACKED_TOP": ({"M_a": 37, "M_crdn": 37.3}, {"M_a": 38, "M_crdn": 37.3}),
+    "deflection_stages.WHOLE": ({"M_a": 37, "M_crd": 37.3}, {"M_a": 38, "M_crd": 37.3}),
+    "deflection_stages.WHOLE_TOP": ({"M_a": 37, "M_crdn": 37.3}, {"M_a": 38, "M_crdn": 37.3}),
     "deflection_stages.RISE_SMALL": (
         {"delta_up": 4.9, "delta_max": 5},
         {"delta_up": 5.1, "delta_max": 5},
