@@ -54,8 +54,8 @@ class Tally:
 
     @property
     def share_told(self) -> float:
-        """Share of the origins found whose true slip stands among the first three."""
-        return self.told.total() / self.found.total()
+        """Share of the origins found whose true slip stands among the first three; 0 of none."""
+        return self.told.total() / max(self.found.total(), 1)
 
     def lines(self) -> Iterable[str]:
         """Give the table of counts by kind."""
