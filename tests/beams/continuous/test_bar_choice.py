@@ -17,9 +17,9 @@ from hypothesis import strategies as st
 
 from lineproof import beams
 from lineproof.beams.bars import BarLayer, in_line
-from lineproof.beams.continuous import flexure
+from lineproof.beams.continuous import flexure, flexure_choice
 from lineproof.beams.continuous.bar_choice import TopBars
-from lineproof.beams.continuous.flexure import faces_of, hogging, sagging_spans
+from lineproof.beams.continuous.faces import faces_of, hogging, sagging_spans
 from lineproof.errors import UserError
 from lineproof.record.entry import CHECK
 from lineproof.sheet import Trial
@@ -80,7 +80,7 @@ def _best_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int] | None:
 def _key_of_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int]:
     model = beam.model
     second, mass, number = 0, 0.0, 0
-    for span, chosen in flexure.choose_bottom(model, beam.pair, {}).items():
+    for span, chosen in flexure_choice.choose_bottom(model, beam.pair, {}).items():
         layers = chosen.bars
         assert isinstance(layers, tuple)
         second += len(layers) - 1
@@ -109,7 +109,7 @@ def test_no_bottom_bars_are_better(changes: dict[str, Any]) -> None:
     best = _best_bottom(beam)
     if best is None:
         with pytest.raises(UserError, match="bottom_bars"):
-            flexure.choose_bottom(beam.model, beam.pair, {})
+            flexure_choice.choose_bottom(beam.model, beam.pair, {})
         return
     second, mass, number = _key_of_bottom(beam)
     assert (second, round(mass), number) == (best[0], round(best[1]), best[2])
@@ -146,7 +146,7 @@ def _tops_are_best(beam: beams.ContinuousBeam) -> None:
         if all(size in made for made in best.values())
     ]
     try:
-        chosen = flexure.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
+        chosen = flexure_choice.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
     except UserError:  # refused: then none may hold
         chosen = {}
     if not chosen:

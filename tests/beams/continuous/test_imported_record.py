@@ -12,7 +12,7 @@ import pytest
 
 from lineproof import beams
 from lineproof.beams.continuous.case_forces import record_forces
-from lineproof.beams.continuous.flexure import faces_of, sagging_spans
+from lineproof.beams.continuous.faces import faces_of, sagging_spans
 from lineproof.beams.continuous.forces import Demand
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.model import Model

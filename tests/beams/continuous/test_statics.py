@@ -11,7 +11,7 @@ from hypothesis import strategies as st
 from sympy.physics.continuum_mechanics.beam import Beam as SympyBeam
 
 from lineproof.beams.continuous import case_forces
-from lineproof.beams.continuous.flexure import faces_of, sagging_spans
+from lineproof.beams.continuous.faces import faces_of, sagging_spans
 from lineproof.beams.continuous.forces import Demand
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.steps import Steps

@@ -7,7 +7,7 @@ from dataclasses import replace
 from typing import Any
 
 from lineproof.beams import basics
-from lineproof.beams.continuous import flexure, interface
+from lineproof.beams.continuous import faces, flexure, interface
 from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.anchorage_chapter import record_anchorage
 from lineproof.beams.continuous.coefficients import record_coefficients
@@ -126,7 +126,7 @@ class ContinuousBeam:
         sizes += [top_of(chosen).web.size for chosen in design.top.values()]
         with self.sheet.chapter(FLEXURE_CALL, closing=self._cure):
             record_cover(self.sheet, self.inputs, sizes or [run.size for run in design.runs])
-            for span in flexure.sagging_spans(design.model):
+            for span in faces.sagging_spans(design.model):
                 self._sag(design, span)
             for support, typed in enumerate(self.inputs.supports, start=1):
                 if typed.kind != "free":

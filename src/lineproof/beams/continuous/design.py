@@ -13,7 +13,7 @@ from itertools import count
 from typing import Any
 
 from lineproof.beams.bars import BarLayer, BarLayers, bars_text
-from lineproof.beams.continuous import flexure
+from lineproof.beams.continuous import faces, flexure_choice
 from lineproof.beams.continuous.bar_choice import Bars, Chosen, TopBars
 from lineproof.beams.continuous.design_torsion import (
     HOLDERS,
@@ -37,7 +37,7 @@ from lineproof.beams.continuous.detailing_given import (
     read_given_runs,
     section_bars_of,
 )
-from lineproof.beams.continuous.flexure import SIDES
+from lineproof.beams.continuous.flexure_choice import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import stand
@@ -118,21 +118,21 @@ def _designed(
     none = SectionBars((), (), asked.holders)
     bare = Designed(
         basis, model.forces, none, pair, breadths=breadths,
-        restrained=flexure.restrained_supports(model),
+        restrained=faces.restrained_supports(model),
     )  # fmt: skip
-    bottom = flexure.choose_bottom(
+    bottom = flexure_choice.choose_bottom(
         model, pair, bottom_given, asked.bottom,
         lambda k, size: k not in asked.anchored or _anchored_span(bare, k, size),
     )  # fmt: skip
-    top = flexure.choose_top(
+    top = flexure_choice.choose_top(
         model,
         pair,
         top_given,
         lambda j, size, spread: _anchored(bare, j, size, spread=spread),
         asked.top,
     )
-    flexure.refuse_unfit(bottom, "bottom_bars")
-    flexure.refuse_unfit(top, "top_bars")
+    flexure_choice.refuse_unfit(bottom, "bottom_bars")
+    flexure_choice.refuse_unfit(top, "top_bars")
     beside = _beside(bare, bottom, runs)
     bars = _section_bars(model, bottom, top, asked.holders, beside)
     designed = replace(bare, bars=bars)
@@ -255,7 +255,7 @@ def _given_sections(
 ) -> tuple[dict[int, BarLayers], dict[int, TopBars]]:
     """Return the bars of the sections that are given, as such or as runs along the beam."""
     if runs is None:
-        return flexure.given_bottom(model), flexure.given_top_bars(model, pair)
+        return flexure_choice.given_bottom(model), flexure_choice.given_top_bars(model, pair)
     found = section_bars_of(runs, outline, HOLDERS)
     sides = SIDES[model.inputs.shape]
     bottom = {span: layers for span, layers in enumerate(found.bottom, start=1) if layers}

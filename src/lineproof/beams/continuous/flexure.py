@@ -1,287 +1,45 @@
-"""Flexure at every span and both faces of every support: numbers for the choice, then lines."""
+"""Flexure at every span and both faces of every support, as lines."""
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass
+from collections.abc import Mapping
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayers
 from lineproof.beams.bottom_bars import bars_inside, for_distance
-from lineproof.beams.choice import bars_for
 from lineproof.beams.continuous.bar_choice import (
-    Chosen,
-    Section,
     TopBars,
-    bottom_trial,
-    choose,
-    top_trial,
 )
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
-from lineproof.beams.continuous.forces import Demand, End, other
+from lineproof.beams.continuous.faces import (
+    Face,
+    faces_of,
+    hogging,
+    nominally_simple,
+)
+from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
-from lineproof.beams.continuous.numbers import Numbers
-from lineproof.beams.continuous.restraint import held_in_frame, record_restraint, restraint_moment
+from lineproof.beams.continuous.restraint import record_restraint
 from lineproof.beams.continuous.section_checks import (
     SPREAD_AREAS,
     TENSION_AREAS,
     TENSION_WIDTHS,
-    Rules,
-    bottom_checks,
-    top_checks,
 )
-from lineproof.beams.cracks import cracks_inside, exposure_kind, skin_inside
-from lineproof.beams.flexure import confirmed_value, record_yield, required, resistance
+from lineproof.beams.cracks import cracks_inside, skin_inside
+from lineproof.beams.flexure import record_yield, required, resistance
 from lineproof.beams.minimum_steel import minimum_of
 from lineproof.beams.second_path import record_proof
 from lineproof.beams.section import zone_of
 from lineproof.beams.steps import Steps
-from lineproof.errors import FaultList
 from lineproof.record import Entry
-from lineproof.standards.a23_3 import analysis, bars, crack_control, flexure, minimum
+from lineproof.standards.a23_3 import analysis, bars, flexure, minimum
 from lineproof.standards.codes import CodePair
 
 _LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
-_MATERIALS = (
-    "phi_c", "phi_s", "f_c", "f_y", "E_s", "eps_cu", "lambda_", "alpha_1", "beta_1", "f_r", "E_c",
-    "c_c", "a_max", "b_w",
-)  # fmt: skip
 _SHARED = ("M_r", "A_s", "d", "n_o", "A_b", "d_b", "d_bs")
 """What both faces of a support share where their section is the same."""
 CHOSEN = "chosen: one size for the beam, few second layers, then least mass"
-
-
-@dataclass(frozen=True, slots=True)
-class Face:
-    """A face of a support, in the span it belongs to."""
-
-    support: int
-    side: End
-
-    @property
-    def span(self) -> int:
-        """The span that the face belongs to."""
-        return self.support - 1 if self.side == "left" else self.support
-
-    @property
-    def near(self) -> End:
-        """The end of that span at which it lies."""
-        return other(self.side)
-
-    @property
-    def key(self) -> str:
-        """Key of its part."""
-        return f"hog-{self.support}-{self.side}"
-
-    @property
-    def name(self) -> str:
-        """Its name in words."""
-        return f"support {self.support}, {self.side} face"
-
-
-def faces_of(model: Model) -> list[Face]:
-    """Return all faces of the beam from left to right."""
-    return [
-        Face(support, side)
-        for support in range(1, model.spans + 2)
-        for side in ("left", "right")
-        if model.forces.has_span(support, side)
-    ]
-
-
-def sagging_spans(model: Model) -> list[int]:
-    """Return the spans that have a moment with the bottom in tension: all but cantilevers."""
-    return [k for k in range(1, model.spans + 1) if not model.forces.beam.cantilever(k)]
-
-
-def nominally_simple(model: Model, face: Face) -> bool:
-    """Tell whether an end support is analysed as simple: not where an imported frame holds it."""
-    kind = model.inputs.supports[face.support - 1].kind
-    simple = kind == "simple" and face.support in (1, model.spans + 1) and not _hung(model, face)
-    return simple and not held_in_frame(model, face.support, face.span)
-
-
-def restrained_supports(model: Model) -> frozenset[int]:
-    """Return the end supports whose top bars are designed for an assumed restraint."""
-    return frozenset(
-        face.support
-        for face in faces_of(model)
-        if nominally_simple(model, face) and restraint_moment(model, face.support, face.span) > 0
-    )
-
-
-def _hung(model: Model, face: Face) -> bool:
-    """Tell whether the span of a face is a cantilever."""
-    return model.forces.beam.cantilever(face.span)
-
-
-# -- numbers ---------------------------------------------------------------------------------
-
-
-def materials_of(model: Model, pair: CodePair) -> Numbers:
-    """Return materials and limits as numbers, from the sheet."""
-    sheet = model.sheet
-    at = {name: sheet.find(name).value for name in _MATERIALS}
-    if model.inputs.slab:
-        at["h_f"] = sheet.find("h_f").value
-    value = confirmed_value(sheet.project, pair)
-    at["c_d"] = flexure.YIELD_LIMIT.function(at["f_y"]) if value is None else float(value["value"])
-    at["z_max"] = crack_control.LIMITS.number(exposure_kind(model.inputs.exposure), "z_max")
-    return at
-
-
-def numbers_in(model: Model, materials: Mapping[str, float], span: int) -> Numbers:
-    """Return materials and geometry of a span as numbers."""
-    place = span_place(model.sheet, model.inputs, span)
-    at = dict(materials) | {name: entry.value for name, entry in place.items()}
-    at["b"] = at.get("b_f", at["b_w"])
-    return at
-
-
-def rules_of(model: Model) -> Rules:
-    """Return the choices that the checks of a section depend on."""
-    return Rules(model.inputs.shape, model.inputs.minimum_rule)
-
-
-Anchored = Callable[[int, str], bool]
-"""Tell whether bars of a size can be anchored: bottom bars of a span, top bars of a support."""
-
-
-def choose_bottom(
-    model: Model,
-    pair: CodePair,
-    given: Mapping[int, BarLayers],
-    least: Mapping[int, float] | None = None,
-    anchored: Anchored | None = None,
-) -> dict[int, Chosen]:
-    """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`.
-
-    Of bars given along the beam: no item for a span whose middle none of them cross.
-
-    ``least`` is the area that shear and torsion ask for, by span; ``anchored`` tells whether bars
-    of a size can be anchored in the end supports.
-    """
-    rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
-    made: dict[int, Chosen] = {}
-    sections: dict[int, Section] = {}
-    for span in sagging_spans(model):
-        at = numbers_in(model, materials, span) | {"M_f": model.forces.sag(span).M}
-        layers = given.get(span)
-        if layers is not None:
-            made[span] = Chosen(f"span {span}", layers, bottom_checks(at, rules, layers, stirrup))
-        elif model.inputs.bar_runs is None:  # else none stand here as given: none are chosen
-            sections[span] = Section(
-                f"span {span}", (at,), model.lengths[span - 1].value, (least or {}).get(span, 0.0)
-            )  # fmt: skip
-    numbered = {section.name: span for span, section in sections.items()}
-    search = bottom_trial(rules, stirrup)
-
-    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
-        if anchored is not None and not anchored(numbered[section.name], size):
-            return None, "anchorage in the support"
-        return search(section, size)
-
-    found = choose(list(sections.values()), trial, "bottom_bars")
-    return made | dict(zip(sections, found, strict=True))
-
-
-def choose_top(
-    model: Model,
-    pair: CodePair,
-    given: Mapping[int, TopBars],
-    anchored: Callable[[int, str, bool], bool],
-    least: Mapping[int, float] | None = None,
-) -> dict[int, Chosen]:
-    """Return the top bars of every support that has a moment with the top in tension.
-
-    Of bars given along the beam: no item for a support that none of them cross.
-
-    ``least`` is the area within the web that torsion asks for, by support.
-    """
-    rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
-    made: dict[int, Chosen] = {}
-    sections: dict[int, Section] = {}
-    for support, numbers in _top_numbers(model, materials).items():
-        name = f"support {support}"
-        top = given.get(support)
-        if top is None:
-            if model.inputs.bar_runs is None:  # else none stand here as given: none are chosen
-                sections[support] = Section(
-                    name, tuple(numbers), _top_length(model, support),
-                    (least or {}).get(support, 0.0),
-                )  # fmt: skip
-            continue
-        faces = [top_checks(dict(at), rules, top.web, top.overhang, stirrup) for at in numbers]
-        made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))
-    numbered = {section.name: support for support, section in sections.items()}
-    search = top_trial(rules, stirrup)
-
-    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
-        found, why = search(section, size)
-        spread = isinstance(found.bars, TopBars) and found.bars.overhang > 0 if found else False
-        if not anchored(numbered[section.name], size, spread):
-            return None, "anchorage in the support"
-        return found, why
-
-    found = choose(list(sections.values()), trial, "top_bars")
-    return made | dict(zip(sections, found, strict=True))
-
-
-def given_bottom(model: Model) -> dict[int, BarLayers]:
-    """Return the bottom bars that the designer gave, by span."""
-    rows = enumerate(model.inputs.bottom_bars, start=1)
-    return {span: layers for span, layers in rows if layers is not None}
-
-
-def given_top_bars(model: Model, pair: CodePair) -> dict[int, TopBars]:
-    """Return the top bars that the designer gave, with those that the overhangs need."""
-    numbers = _top_numbers(model, materials_of(model, pair))
-    rows = enumerate(model.inputs.top_bars, start=1)
-    return {
-        support: _with_overhang(model, layers[0], numbers[support])
-        for support, layers in rows
-        if layers is not None and support in numbers
-    }
-
-
-SIDES = {"T": 2, "L": 1, "rectangular": 0}
-"""Number of overhangs of a shape."""
-
-
-def _with_overhang(model: Model, web: BarLayer, numbers: Iterable[Numbers]) -> TopBars:
-    """Return top bars with the bars of the same size that the overhangs need."""
-    sides = SIDES[model.inputs.shape]
-    if not sides:
-        return TopBars(web, 0, 0)
-    needed = max(
-        minimum.SPREAD_AREA.function(minimum.SPREAD_WIDTH.function(at["b_o"], at["l"]), at["h_f"])
-        for at in numbers
-    )
-    return TopBars(web, bars_for(needed, web.size), sides)
-
-
-def _top_numbers(model: Model, materials: Mapping[str, float]) -> dict[int, list[Numbers]]:
-    made: dict[int, list[Numbers]] = {}
-    for face in faces_of(model):
-        M_f = hogging(model, face)
-        if M_f > 0:
-            at = numbers_in(model, materials, face.span) | {"M_f": M_f}
-            made.setdefault(face.support, []).append(at)
-    return made
-
-
-def hogging(model: Model, face: Face) -> float:
-    """Return the design moment of a face, top in tension; at most 0 where there is none [N.mm]."""
-    if nominally_simple(model, face):
-        return restraint_moment(model, face.support, face.span)
-    return -model.forces.hog(face.support, face.side).M
-
-
-def _top_length(model: Model, support: int) -> float:
-    """Return about how long the top bars of a support are [mm]: a third of each span beside it."""
-    beside = [k for k in (support - 1, support) if 1 <= k <= model.spans]
-    return float(sum(model.lengths[k - 1].value for k in beside)) / 3
 
 
 def _origin(inputs: ContinuousInputs, bars: object) -> str:
@@ -289,9 +47,6 @@ def _origin(inputs: ContinuousInputs, bars: object) -> str:
     if inputs.bar_runs is not None:
         return "as given along the beam"
     return "given" if bars is not None else CHOSEN
-
-
-# -- lines -----------------------------------------------------------------------------------
 
 
 def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> None:
@@ -467,19 +222,3 @@ def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top
         steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
         steps.check(minimum.SPREAD)
     cracks_inside(steps, model.inputs.exposure, (top.web,), TENSION_AREAS[model.inputs.shape])
-
-
-def refuse_unfit(chosen: Mapping[int, Chosen], what: str) -> None:
-    """Refuse given bars that do not fit into the web: nothing could be printed of them."""
-    faults = FaultList()
-    for made in chosen.values():
-        unfit = [
-            key for key in (bars.FITS.key, bars.FITS_SECOND.key) if made.checks.get(key, 0) > 1
-        ]
-        if unfit:
-            shown = " / ".join(map(str, made.bars)) if isinstance(made.bars, tuple) else made.bars
-            faults.add(
-                f"{what}: {shown} do not fit into the web at {made.section}; write fewer or larger "
-                "bars, or a wider web"
-            )
-    faults.raise_if_any()

@@ -9,12 +9,10 @@ from __future__ import annotations
 from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.bottom_bars import bars_inside
 from lineproof.beams.continuous.case_forces import record_forces
+from lineproof.beams.continuous.faces import Face, faces_of, hogging
 from lineproof.beams.continuous.flexure import (
-    Face,
     at_face,
     begin,
-    faces_of,
-    hogging,
     nearer,
     record_demand,
     record_no_moment,

@@ -14,8 +14,8 @@ from lineproof.beams.continuous.bearing import (
 )
 from lineproof.beams.continuous.case_forces import factor_text, record_forces
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.flexure import Face as FaceOfSupport
-from lineproof.beams.continuous.flexure import faces_of, hogging, restrained_supports
+from lineproof.beams.continuous.faces import Face as FaceOfSupport
+from lineproof.beams.continuous.faces import faces_of, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.groups import Group, groups_of
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion

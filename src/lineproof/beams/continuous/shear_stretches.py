@@ -14,7 +14,7 @@ from itertools import pairwise
 import numpy as np
 
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
-from lineproof.beams.continuous.flexure import faces_of, hogging
+from lineproof.beams.continuous.faces import faces_of, hogging
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.beams.continuous.model import Model

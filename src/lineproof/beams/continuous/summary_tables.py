@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.flexure import (
+from lineproof.beams.continuous.faces import (
     Face,
     faces_of,
     hogging,

@@ -1,0 +1,80 @@
+"""The faces of supports, and the spans with a moment that puts the bottom in tension."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from lineproof.beams.continuous.forces import End, other
+from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.restraint import held_in_frame, restraint_moment
+
+
+@dataclass(frozen=True, slots=True)
+class Face:
+    """A face of a support, in the span it belongs to."""
+
+    support: int
+    side: End
+
+    @property
+    def span(self) -> int:
+        """The span that the face belongs to."""
+        return self.support - 1 if self.side == "left" else self.support
+
+    @property
+    def near(self) -> End:
+        """The end of that span at which it lies."""
+        return other(self.side)
+
+    @property
+    def key(self) -> str:
+        """Key of its part."""
+        return f"hog-{self.support}-{self.side}"
+
+    @property
+    def name(self) -> str:
+        """Its name in words."""
+        return f"support {self.support}, {self.side} face"
+
+
+def faces_of(model: Model) -> list[Face]:
+    """Return all faces of the beam from left to right."""
+    return [
+        Face(support, side)
+        for support in range(1, model.spans + 2)
+        for side in ("left", "right")
+        if model.forces.has_span(support, side)
+    ]
+
+
+def sagging_spans(model: Model) -> list[int]:
+    """Return the spans that have a moment with the bottom in tension: all but cantilevers."""
+    return [k for k in range(1, model.spans + 1) if not model.forces.beam.cantilever(k)]
+
+
+def nominally_simple(model: Model, face: Face) -> bool:
+    """Tell whether an end support is analysed as simple: not where an imported frame holds it."""
+    kind = model.inputs.supports[face.support - 1].kind
+    simple = kind == "simple" and face.support in (1, model.spans + 1) and not _hung(model, face)
+    return simple and not held_in_frame(model, face.support, face.span)
+
+
+def restrained_supports(model: Model) -> frozenset[int]:
+    """Return the end supports whose top bars are designed for an assumed restraint."""
+    return frozenset(
+        face.support
+        for face in faces_of(model)
+        if nominally_simple(model, face) and restraint_moment(model, face.support, face.span) > 0
+    )
+
+
+def _hung(model: Model, face: Face) -> bool:
+    """Tell whether the span of a face is a cantilever."""
+    return model.forces.beam.cantilever(face.span)
+
+
+def hogging(model: Model, face: Face) -> float:
+    """Return the design moment of a face, top in tension; at most 0 where there is none [N.mm]."""
+    if nominally_simple(model, face):
+        return restraint_moment(model, face.support, face.span)
+    return -model.forces.hog(face.support, face.side).M
