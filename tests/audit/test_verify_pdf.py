@@ -22,6 +22,7 @@ from pypdf.generic import (
 from tests.audit import verifying as by
 
 from lineproof.audit.verify import pdf as verify_pdf
+from lineproof.audit.verify.data import Alteration, Proof
 from lineproof.audit.verify.verification import Outcome, Source, Verification, Where, verify
 from lineproof.errors import UserError
 from lineproof.package import Package, to_pdf
@@ -438,3 +439,23 @@ def test_pages_drawn_again_by_another_program_are_known_but_not_compared() -> No
 
     assert found.outcome is Outcome.STRIPPED
     assert "name the record given and have been drawn again" in said(found)
+
+
+@pytest.mark.parametrize(("altered", "told"), [(1, False), (2, False), (3, True)])
+def test_where_most_lines_differ_another_version_is_thought_of(altered: int, *, told: bool) -> None:
+    """Of four lines: two are half of them, three are most."""
+    alterations = tuple(
+        Alteration(Where.PRINT, "the print differs", "B1", id=f"a/x_{n}") for n in range(altered)
+    )
+    found = Verification("a.pdf", Outcome.ALTERED, (Proof("B1", "0" * 16, 4),), alterations)
+
+    assert verify_pdf.most_differ(found) is told
+
+
+def test_a_record_altered_in_many_lines_is_no_other_version() -> None:
+    alterations = tuple(
+        Alteration(Where.RECORD, "the value differs", "B1", id=f"a/x_{n}") for n in range(4)
+    )
+    found = Verification("a.pdf", Outcome.ALTERED, (Proof("B1", "0" * 16, 4),), alterations)
+
+    assert not verify_pdf.most_differ(found)
