@@ -216,9 +216,13 @@ def read_floor_beam(
     }  # fmt: skip
     take("web_openings", no_openings)
     check_density(fields, given, reader.faults)
-    _check_flange(fields, given, reader.faults)
+    check_flange(fields, given, reader.faults)
+    if fields["ends"] == "free" and given["top_bars"] is not None:
+        reader.faults.add(
+            "top_bars: free ends have no moment to carry; leave them out: top_bars = None"
+        )
     reader.smaller("h_f", "h", fields)
-    _check_geometry(fields, given, reader.faults)
+    _check_depth(fields, given, reader.faults)
     reader.faults.raise_if_any()
     return FloorBeamInputs(**fields), pair
 
@@ -260,7 +264,8 @@ def no_openings(name: str, given: object) -> None:
         )
 
 
-def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+def check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    """Note what a shape lacks of its slab, and a slab, a floor or webs that do not go with it."""
     shape, h_f = fields["shape"], fields["h_f"]
     if shape in ("T", "L") and given["h_f"] is None:
         faults.add(f"h_f: a beam of shape {shape!r} needs its slab; write '140 mm'")
@@ -275,13 +280,17 @@ def _check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
         faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
     if shape == "L" and given["tributary_width"] is None:
         faults.add("tributary_width: an edge beam needs it; write for example '1.7 m'")
-    if fields["ends"] == "free" and given["top_bars"] is not None:
-        faults.add("top_bars: free ends have no moment to carry; leave them out: top_bars = None")
     cover = fields["cover"]
     if h_f is not None and cover is not None and h_f.value <= cover.value:
         faults.add(
             f"h_f: {echo(given['h_f'])} is not thicker than its cover of {echo(given['cover'])}; "
             "write a thicker slab"
+        )
+    spacing, b_w = fields["spacing"], fields["b_w"]
+    if shape != "rectangular" and None not in (spacing, b_w) and spacing.value <= b_w.value:
+        faults.add(
+            f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
+            "write the distance between the centres of the beams"
         )
 
 
@@ -295,15 +304,8 @@ def check_density(fields: Mapping[str, Any], given: Mapping[str, Any], faults: F
         )
 
 
-def _check_geometry(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
-    h, b_w = fields["h"], fields["b_w"]
-    spacing, span = fields["spacing"], fields["span"]
-    tee = fields["shape"] != "rectangular" and None not in (spacing, b_w)
-    if tee and spacing.value <= b_w.value:
-        faults.add(
-            f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
-            "write the distance between the centres of the beams"
-        )
+def _check_depth(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    h, span = fields["h"], fields["span"]
     if span is not None and h is not None and span.value < 2 * h.value:
         faults.add(
             f"span: {echo(given['span'])} is less than twice h of {echo(given['h'])}: a deep beam "

@@ -107,6 +107,12 @@ def steel(A_s: float, size: str, limit: float | None = None) -> Variable:
     return Variable(up(A_s, most, 10), "{} mm² of bars", "or more", none, size)
 
 
+def longer(room: float, bars: str, more: str = "") -> Variable:
+    """Return by how much bars are made longer [mm], in steps of 50 mm up to the room there is."""
+    none = f"no greater length of {bars}"
+    return Variable(up(0, room, 50), f"{bars} made {{}} mm longer{more}", "or more", none)
+
+
 def less_steel(A_s: float, size: str) -> Variable:
     """Return fewer bars of their size; the area stands for them."""
     A_b = BARS.number(size, "A_b")

@@ -13,8 +13,9 @@ from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
-from lineproof.beams.continuous.cures import Cure, Variable
+from lineproof.beams.continuous.cures import Cure
 from lineproof.beams.continuous.cutoff import (
+    STEP,
     along,
     far_face,
     half_of,
@@ -33,7 +34,6 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
 
 _PART = re.compile(r"anchorage-(bottom|top)-(\d+)-(left|right)-cut-(\d+)-shear")
-_STEP = 50.0
 _WIDEST = 625.0
 
 
@@ -79,13 +79,9 @@ def _longer(design: Design, cut: Cut) -> Cure:
             return 0.0  # no longer cut: they run into the support
         return 0.0 if zone_at(designed, side.face, side.span, side.near, t, going) else math.inf
 
-    room = cut.t - half + _STEP if inward else far - cut.t
-    bars = text_of(side.cuts[cut.index].runs)
-    variable = Variable(
-        find.up(0, room, _STEP), f"the {bars} that end here made {{}} mm longer", "or more",
-        f"no greater length of the {bars}",
-    )  # fmt: skip
-    (cure,) = find.cures(use, {"longer": variable})
+    room = cut.t - half + STEP if inward else far - cut.t
+    bars = f"the {text_of(side.cuts[cut.index].runs)} that end here"
+    (cure,) = find.cures(use, {"longer": find.longer(room, bars)})
     return cure
 
 

@@ -166,11 +166,7 @@ def _moved(trial: _Trial, ending: Runs, starting: Runs) -> Cure | None:
 
     which = f"the {text_of(bars)} that {_place(bars[0], ending, starting)}"
     both = " at both ends" if ending and starting else ""
-    variable = Variable(
-        find.up(0, room, STEP), f"{which} made {{}} mm longer{both}", "or more",
-        f"no greater length of {which}",
-    )  # fmt: skip
-    (cure,) = find.cures(use, {"longer": variable})
+    (cure,) = find.cures(use, {"longer": find.longer(room, which, both)})
     return cure
 
 

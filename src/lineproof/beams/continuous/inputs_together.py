@@ -14,9 +14,10 @@ from lineproof.beams.continuous.typed_beam import (
 from lineproof.beams.inputs import (
     LEAST_NORMAL,
     SNOWED_ON,
+    check_flange,
 )
 from lineproof.errors import FaultList, UserError
-from lineproof.quantity import Typed, echo
+from lineproof.quantity import Typed
 from lineproof.quantity.units import internal_factor
 from lineproof.standards.a23_3.bars import GRADES
 
@@ -58,33 +59,9 @@ def check_unit_weight(fields: Mapping[str, Any], faults: FaultList) -> None:
 
 def check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
     """Refuse a shape without the slab that it needs, and a slab that does not go with it."""
-    shape, h_f, cover = fields["shape"], fields["h_f"], fields["cover"]
-    if shape in ("T", "L") and given["h_f"] is None:
-        faults.add(f"h_f: a beam of shape {shape!r} needs its slab; write '140 mm'")
-    if shape == "rectangular" and given["h_f"] is not None:
-        faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
-    if (shape == "rectangular") == (given["floor_weight"] is None):
-        faults.add(
-            "floor_weight: a rectangular beam needs the weight of the floor it carries; write "
-            "'3.4 kPa', or '0 kPa' if it carries none"
-            if shape == "rectangular"
-            else "floor_weight: the slab of a T or an L is counted from h_f; write None"
-        )
-    if shape == "L" and given["tributary_width"] is None:
-        faults.add("tributary_width: an edge beam needs it; write for example '1.7 m'")
-    if h_f is not None and cover is not None and h_f.value <= cover.value:
-        faults.add(
-            f"h_f: {echo(given['h_f'])} is not thicker than its cover of {echo(given['cover'])}; "
-            "write a thicker slab"
-        )
-    if shape == "rectangular" and given["slab_bars"] is not None:
+    check_flange(fields, given, faults)
+    if fields["shape"] == "rectangular" and given["slab_bars"] is not None:
         faults.add("slab_bars: a rectangular beam has no flange; leave slab_bars out")
-    spacing, b_w = fields["spacing"], fields["b_w"]
-    if shape != "rectangular" and None not in (spacing, b_w) and spacing.value <= b_w.value:
-        faults.add(
-            f"spacing: {echo(given['spacing'])} is not more than b_w of {echo(given['b_w'])}; "
-            "write the distance between the centres of the beams"
-        )
 
 
 def check_bars_given(fields: Mapping[str, Any], faults: FaultList) -> None:
