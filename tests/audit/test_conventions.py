@@ -134,3 +134,24 @@ def test_only_moments_have_a_convention() -> None:
     claims = [typed(graph, "beam/d", "-540"), typed(graph, "beam/d_v", "-486")]
 
     assert convention_of(graph, claims).ids == frozenset()
+
+
+def test_one_moment_that_stands_in_two_parts_is_no_convention() -> None:
+    """The moment at the far end, in the part of flexure and of shear: one slip, told as such."""
+    graph = spans()
+    ids = ("hog-2-right/M_sf", "shear-2-left/M_sf")
+    assert graph.stored[ids[0]] == graph.stored[ids[1]]
+    claims = [typed(graph, i, text_of(graph, graph[i], -1)) for i in ids]
+
+    audit = audit_claims(graph.record, claims, graph)
+
+    assert audit.notes == ()
+    assert [f.ids[0] for f in audit.findings] == list(ids)
+
+
+def test_one_symbol_turned_beside_others_in_our_sign_is_no_convention() -> None:
+    """All moments at the far ends turned, those at the near ends not: each turned one is told."""
+    audit = audited(lambda node: node.symbol == "M_sf")
+
+    assert audit.notes == ()
+    assert audit.findings

@@ -91,6 +91,17 @@ def test_a_line_not_changed_with_its_input_says_so() -> None:
     assert "1500 mm² does, and 1200 mm² is right; it is the value for other inputs" in said[1].what
 
 
+def test_a_line_that_cannot_be_judged_is_not_carried_as_well() -> None:
+    """With a of 110 the decision a <= h_f of 100 turns: M_r has a finding of its own."""
+    graph = Graph(beam("a <= h_f"))
+    claims = [typed(graph, "beam/a", "110"), typed(graph, "strength/M_r", "150")]
+
+    first, second = audit_claims(graph.record, claims, graph).findings
+
+    assert {first.ids, second.ids} == {("beam/a",), ("strength/M_r",)}
+    assert "carries it" not in first.what + second.what
+
+
 def test_a_slip_of_units_is_told_as_one() -> None:
     (finding,) = found(beam(), {"strength/M_f": "180 N.mm"})
     assert "180 N·mm claimed; reproduced exactly with N·mm in place of kN·m" in finding.what

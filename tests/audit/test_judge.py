@@ -18,9 +18,11 @@ from lineproof.audit.audit import audit_claims
 from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Claim, Interval, Slip, Verdict
 from lineproof.audit.graph import Graph
+from lineproof.audit.slips.search import find_slips
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
+from lineproof.sheet import Sheet
 
 SOUND = {
     "given/h": "600", "beam/d": "539", "beam/A_s": "1200", "beam/a": "65.0",
@@ -330,3 +332,88 @@ def test_a_rounding_errs_where_its_effect_does_however_small() -> None:
     assert verdicts(light, {"beam/M_f": "181"})["beam/M_f"] is Verdict.SAFE_ROUNDING
     assert verdicts(light, {"beam/M_f": "180.0"})["beam/M_f"] is Verdict.UNSAFE_ROUNDING
     assert verdicts(light, {"beam/M_f": "179.9"})["beam/M_f"] is Verdict.ORIGIN
+
+
+def test_a_twin_that_is_claimed_later_in_the_record_is_a_cause() -> None:
+    """w_D = 8 x 4 = 32, claimed 16; w_f 22 is no 1.25 x 16; l 7 stands in a later part.
+
+    M_f = 20 x 6^2/8 = 90 with w_f put right to 1.25 x 16 = 20: worked rightly from what was
+    written wrongly.
+    """
+    sheet = Sheet("H1", "Two spans")
+    with sheet.part("a", "Span 1: a"):
+        for symbol, value in {"q": "8 kPa", "b_tr": "4 m", "l": "6 m"}.items():
+            sheet.given(symbol, value)
+        for text, unit in {"w_D = q*b_tr": "kN/m", "w_f = 1.25*w_D": "kN/m"}.items():
+            sheet.line(text, unit=unit)
+        sheet.line("M_f = w_f*l**2/8", unit="kN.m")
+    with sheet.part("z", "Span 2: z"):
+        sheet.given("l", "6 m")
+    claims = {"a/w_D": "16.0", "a/w_f": "22.0", "a/M_f": "90.0", "z/l": "7"}
+
+    found = judged(sheet.close(), claims)
+
+    assert found["z/l"].verdict is Verdict.INPUT
+    assert found["a/w_f"].verdict is Verdict.ORIGIN
+    assert found["a/M_f"].verdict in (Verdict.AGREES, Verdict.CARRIED)
+
+
+@pytest.mark.parametrize(
+    ("claims", "line"),
+    [
+        ({"beam/d": "0.5", "strength/M_r": "225"}, "strength/M_r"),
+        ({"beam/d": "9", "strength/M_r": "195"}, "strength/M_r"),
+        ({"beam/A_s": "0.001", "strength/M_r": "150"}, "strength/M_r"),
+    ],
+)
+def test_a_value_claimed_far_too_small_leaves_no_more_open_than_it_says(
+    claims: Mapping[str, str], line: str
+) -> None:
+    """M_r is 206.6: with d of 538.95, known to half a millimetre, 225 and 195 do not follow."""
+    assert judged(beam(), claims)[line].verdict is Verdict.ORIGIN
+
+
+def test_the_area_may_be_read_by_its_ratio_whatever_factor_of_the_materials_is_claimed() -> None:
+    """rho = 1987.5/(400 x 540) = 0.00920: 0.0092 x 400 x 540 = 1987.2. alpha_1 = 0.805.
+
+    a_r = 0.2 x 540 = 108; A_sr = 0.805 x 0.65 x 30 x 400 x 108/(0.85 x 400) = 1994.5, and
+    1994.5/216 000 = 0.00923, read as 0.0092. Who wrote down a_r worked the formula.
+    """
+    sheet = sheet_of(
+        {
+            "alpha_1 = 0.85 - 0.0015*k": "", "a_r = 0.2*d": "mm",
+            "A_sr = alpha_1*phi_c*f_c*b*a_r/(phi_s*f_y)": "mm2",
+        },
+        {"k": "30", "d": "540 mm", "b": "400 mm", "f_c": "30 MPa", "f_y": "400 MPa",
+         "phi_c": "0.65", "phi_s": "0.85"},
+    )  # fmt: skip
+    record = sheet.close()
+    read = {"beam/A_sr": "1987.2"}
+
+    assert judged(record, read)["beam/A_sr"].verdict is Verdict.OTHER_METHOD
+    material = judged(record, {**read, "beam/alpha_1": "0.805"})
+    assert material["beam/A_sr"].verdict is Verdict.OTHER_METHOD
+    block = judged(record, {**read, "beam/a_r": "108.0"})
+    assert block["beam/A_sr"].verdict is not Verdict.OTHER_METHOD
+
+
+def test_a_length_worked_out_in_the_section_is_not_rounded_as_one_set_out() -> None:
+    """0.9 x 541 = 486.9 mm: a spacing of 475 is one, s_z, which is d_v, is not."""
+    sheet = sheet_of({"s_z = 0.9*d": "mm", "s = 0.9*d": "mm"}, {"d": "541 mm"})
+
+    found = judged(sheet.close(), {"beam/s_z": "475", "beam/s": "475"})
+
+    assert found["beam/s_z"].verdict is Verdict.ORIGIN
+    assert found["beam/s"].verdict is Verdict.SAFE_ROUNDING
+    assert found["beam/s"].note.endswith("no check is moved by it")
+
+
+def test_an_input_that_was_claimed_otherwise_is_misread_as_it_was_claimed() -> None:
+    """b is 400, claimed 450; A_g = 540 x 600 = 324 000 has 540 for 450: its digits transposed."""
+    record = sheet_of({"A_g = b*h": "mm2"}, {"b": "400 mm", "h": "600 mm"}).close()
+
+    found = judged(record, {"given/b": "450", "beam/A_g": "324000"}, find_slips)["beam/A_g"]
+
+    assert found.verdict is Verdict.ORIGIN
+    assert any("typed as 540 in place of 450" in slip.sentence for slip in found.slips)
+    assert not any("in place of 400" in slip.sentence for slip in found.slips[:1])

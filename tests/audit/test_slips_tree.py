@@ -9,8 +9,9 @@ from tests.audit.slip_sheet import beam
 from tests.beams.continuous.flow import analysed, record_so_far
 
 from lineproof.audit.graph import Graph, evaluated
-from lineproof.audit.slips.tree import FAILURES, Places, places_of, text_of
+from lineproof.audit.slips.tree import Places, places_of, text_of
 from lineproof.formula import parse_expression, parse_line
+from lineproof.formula.compiled import NOT_COMPUTED
 
 
 def places(text: str, **named: float) -> Places:
@@ -77,7 +78,7 @@ def test_widths_add_up_to_first_order() -> None:
 def test_what_has_no_real_value_is_refused(text: str) -> None:
     made = places(text, a=2.0, b=3.0)
 
-    with pytest.raises(FAILURES):
+    with pytest.raises(NOT_COMPUTED):
         made.with_place(made.uses("b")[0], 0.0)
 
 

@@ -275,3 +275,26 @@ def test_entries_of_a_part(sheet: Sheet) -> None:
         assert sheet.find("h") is own
     with pytest.raises(UserError, match="h stands in inputs/h, p/h"):
         sheet.find("h")
+
+
+def test_a_part_made_again_stands_for_the_new_value_alone() -> None:
+    sheet = Sheet("B1")
+    for value in ("400 mm", "450 mm"):
+        with sheet.part("given", "Given"):
+            sheet.given("b", value)
+        with sheet.part("lines", "Lines"):
+            made = sheet.line("b_2 = 2*b", unit="mm")
+        assert made.value == 2 * float(value.split()[0])
+
+
+def test_a_part_no_longer_expected_gives_no_value() -> None:
+    sheet = Sheet("B1")
+    sheet.expect({"given": "beam.given()"})
+    with sheet.part("given", "Given"):
+        sheet.given("b", "400 mm")
+    sheet.expect({})
+    with (
+        pytest.raises(UserError, match="b is not recorded"),
+        sheet.part("lines", "Lines"),
+    ):
+        sheet.line("b_2 = 2*b", unit="mm")

@@ -105,14 +105,28 @@ class Verdict(StrEnum):
 
 
 @dataclass(frozen=True, slots=True)
+class Cause:
+    """What a slip may have been, in words such as ``h (1.4, overall depth) in place of d``.
+
+    ``replaced`` and ``took`` are the ids of the value replaced and of the one taken for it, where
+    a value was put for another. ``miswritten`` tells that a right result was written wrongly,
+    ``above`` that it was made before the claimed line, where nobody claimed anything.
+    """
+
+    words: str
+    replaced: str = ""
+    took: str = ""
+    miswritten: bool = False
+    above: bool = False
+
+
+@dataclass(frozen=True, slots=True)
 class Slip:
     """One slip that reproduces a claimed value: its kind, the checker's sentence, its value.
 
     ``likely`` orders slips of one line, the most plausible first; it is no probability. ``also``
-    names other kinds of slip that give the very same value. ``swap`` are the ids of the value
-    replaced and of the one taken for it, where the slip puts a value for another; the same id
-    twice says that a result was written wrongly. ``above`` tells that it was made before the
-    claimed line, where nobody claimed anything.
+    names other kinds of slip that give the very same value. ``causes`` are what it may have been,
+    the likeliest first.
     """
 
     kind: str
@@ -120,14 +134,7 @@ class Slip:
     value: float
     likely: float
     also: tuple[str, ...] = ()
-    swap: tuple[str, str] = ("", "")
-    above: bool = False
-
-    @property
-    def first(self) -> str:
-        """The first cause in words, without its stop, small at the beginning."""
-        said = self.sentence.partition(". The same value")[0].rstrip(".")
-        return said[:1].lower() + said[1:]
+    causes: tuple[Cause, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -66,8 +66,9 @@ def _carried(judged: Sequence[Judged]) -> dict[str, list[str]]:
     """Return by origin, or doubtful line, the ids of the claims that carry it or rest on it."""
     found: dict[str, list[str]] = {}
     for each in judged:
-        for cause in each.causes:
-            found.setdefault(cause, []).append(each.id)
+        if each.verdict in (Verdict.CARRIED, Verdict.AGREES):  # others have a finding of their own
+            for cause in each.causes:
+                found.setdefault(cause, []).append(each.id)
     return found
 
 

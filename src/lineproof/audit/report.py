@@ -11,7 +11,17 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 from itertools import groupby
 from typing import Any
 
-from lineproof.audit.data import Audit, Claim, Effect, Finding, Interval, Judged, Severity, Verdict
+from lineproof.audit.data import (
+    Audit,
+    Claim,
+    Effect,
+    Finding,
+    Interval,
+    Judged,
+    Severity,
+    Slip,
+    Verdict,
+)
 from lineproof.audit.findings import named_clause
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.search.drawing import SOURCE as DRAWING
@@ -193,7 +203,7 @@ class Report:
         others = [
             f"{s.sentence[:1].lower()}{s.sentence[1:]}".rstrip(".")
             for s in slips[:MOST_SLIPS]
-            if s.first.lower() not in f"{finding.what} {finding.advice}".lower()
+            if not _is_told(s, f"{finding.what} {finding.advice}")
         ]
         return [f"Next in likelihood: {'; '.join(others)}."] if others else []
 
@@ -308,6 +318,12 @@ def _text(sentence: str) -> str:
     """Return a sentence with a capital and a full stop."""
     text = sentence.strip()
     return _capital(text) + ("" if text.endswith((".", "?", "!", ":")) else ".")
+
+
+def _is_told(slip: Slip, said: str) -> bool:
+    """Tell whether what a finding says names a slip already, by any of its causes."""
+    words = [cause.words for cause in slip.causes] or [slip.sentence.rstrip(".")]
+    return any(each.lower() in said.lower() for each in words)
 
 
 def _capital(text: str) -> str:

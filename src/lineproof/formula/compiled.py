@@ -20,6 +20,8 @@ MOST_KEPT = 4096
 _STRENGTH = {"+": 1, "-": 1, "*": 2, "/": 2, "**": 4}
 """How tightly the operators bind in Python; a sign binds at 3."""
 _SIGN, _ATOM = 3, 5
+NOT_COMPUTED = (ArithmeticError, ValueError, TypeError)
+"""What a formula raises where it has no value: TypeError where a root of a negative is compared."""
 PLAIN_COMPARE: dict[str, Callable[[Any, Any], bool]] = {
     "<=": operator.le,
     "<": operator.lt,

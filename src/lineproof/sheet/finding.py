@@ -8,6 +8,7 @@ from dataclasses import dataclass, field
 
 from lineproof.errors import UserError
 from lineproof.formula import Criterion, Formula, Notation, Symbol, symbol_from_id
+from lineproof.formula.compiled import NOT_COMPUTED
 from lineproof.quantity import unit_named
 from lineproof.record import Entry, Procedure
 from lineproof.record.entry import FOUND
@@ -15,9 +16,6 @@ from lineproof.record.procedures import run
 from lineproof.record.sources import FoundSource
 from lineproof.sheet.own_units import keep_to
 from lineproof.sheet.shown import Shown
-
-NOT_COMPUTED = (ArithmeticError, ValueError, TypeError)
-"""What arithmetic without a real result raises; TypeError where a complex root is compared."""
 
 
 @dataclass(frozen=True)

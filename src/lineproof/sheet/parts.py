@@ -29,7 +29,7 @@ class Parts:
         self._closing: Callable[[Part], None] | None = None
         self._part: Part | None = None
         self._scope_of_part: dict[str, Any] = {}
-        self._closed_values: dict[str, list[Entry]] | None = {}
+        self._closed_values: dict[str, list[Entry]] = {}
 
     def _show_part(self, key: str) -> None:
         """Show the part that has just closed."""
@@ -44,8 +44,7 @@ class Parts:
         if self._chapter is not None:
             self._chapter[key] = None
         part = Part(key, title)
-        if key in self._parts:
-            self._closed_values = None
+        self._forget(key)
         self._parts[key] = part
         self._part, self._scope_of_part = part, {}
         try:
@@ -58,8 +57,7 @@ class Parts:
             raise
         finally:
             self._part = None
-            if self._closed_values is not None:
-                _add_values(self._closed_values, part)
+            self._add_values(part)
         self._stopped.pop(key, None)
         self._show_part(key)
 
@@ -76,8 +74,8 @@ class Parts:
         """
         for key in self.expected:
             if key not in calls:
+                self._forget(key)
                 self._parts.pop(key, None)
-                self._closed_values = None
                 self._stopped.pop(key, None)
         self.expected = dict(calls)
         for call in self._stopped_calls.keys() - self.expected.values():
@@ -139,8 +137,10 @@ class Parts:
 
     def adopt(self, parts: Iterable[Part]) -> None:
         """Take over recorded parts as they are."""
-        self._parts.update((part.key, part) for part in parts)
-        self._closed_values = None
+        for part in parts:
+            self._forget(part.key)
+            self._parts[part.key] = part
+            self._add_values(part)
 
     def find(self, name: str) -> Entry:
         """Return the entry a name stands for: in the open part, else outside if unique."""
@@ -172,7 +172,7 @@ class Parts:
         return self._part
 
     def _find(self, name: str) -> Entry:
-        values = self._values_of_closed_parts().get(name, [])
+        values = self._closed_values.get(name, [])
         if len(values) == 1:
             return values[0]
         if values:
@@ -186,17 +186,21 @@ class Parts:
         hint = f" (not run yet: {', '.join(waiting[:_CALLS_NAMED])}{more})" if waiting else ""
         raise UserError(f"{name} is not recorded{hint}; give it first, or name it {name}=...")
 
-    def _values_of_closed_parts(self) -> dict[str, list[Entry]]:
-        """Return the values by symbol: a beam of many spans looks for a name in a thousand parts.
+    def _add_values(self, part: Part) -> None:
+        """Keep the values of a closed part by symbol: a long beam looks for one in many parts.
 
         What stands in the open part is in its scope already.
         """
-        if self._closed_values is None:
-            self._closed_values = {}
-            for part in self._parts.values():
-                if part is not self._part:
-                    _add_values(self._closed_values, part)
-        return self._closed_values
+        for symbol, entry in part.entries.items():
+            if entry.kind in VALUES:
+                self._closed_values.setdefault(symbol, []).append(entry)
+
+    def _forget(self, key: str) -> None:
+        """Look for no value in a part any more that is replaced or dropped."""
+        part = self._parts.get(key)
+        for symbol, entry in part.entries.items() if part else ():
+            if entry.kind in VALUES:
+                self._closed_values[symbol].remove(entry)
 
     def _record(self, entry: Entry) -> Entry:
         part = self._open_part()
@@ -265,12 +269,6 @@ class Parts:
     def _units(self, names: Iterable[str], bound: Mapping[str, Entry]) -> dict[str, str]:
         names = tuple(names)
         return {n: a.unit for n, a in zip(names, self._arguments(names, bound), strict=True)}
-
-
-def _add_values(values: dict[str, list[Entry]], part: Part) -> None:
-    for symbol, entry in part.entries.items():
-        if entry.kind in VALUES:
-            values.setdefault(symbol, []).append(entry)
 
 
 def check_key(key: str) -> None:

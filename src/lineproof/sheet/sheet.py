@@ -9,6 +9,7 @@ from typing import Any, ClassVar
 from lineproof.errors import UserError
 from lineproof.formula import Criterion, Formula, Notation, System
 from lineproof.formula import formula as read_formula
+from lineproof.formula.compiled import NOT_COMPUTED
 from lineproof.formula.notation import check_id
 from lineproof.formula.proof import prove, prove_criterion
 from lineproof.quantity import QuantityInput, Typed, read_quantity, unit_named
@@ -17,7 +18,7 @@ from lineproof.record.build import PartByPart, build, labels_of
 from lineproof.record.entry import CHECK, DECISION, GIVEN, LINE, LOOKUP
 from lineproof.record.sources import GivenSource, LookupSource
 from lineproof.record.uncollected import uncollected
-from lineproof.sheet.finding import NOT_COMPUTED, Finding
+from lineproof.sheet.finding import Finding
 from lineproof.sheet.order import behind, in_order, out_of_date
 from lineproof.sheet.own import own_criterion
 from lineproof.sheet.own_units import keep_to, typed_unit, unit_of_kind

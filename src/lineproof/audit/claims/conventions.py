@@ -34,22 +34,24 @@ class Convention:
 def convention_of(graph: Graph, claims: Sequence[Claim]) -> Convention:
     """Return the claimed moments whose kind is claimed with the opposite sign throughout.
 
-    Kinds are tried from wide to narrow: moments of all symbols that the calc counts as negative,
-    a few of which may be positive under pattern loads; then those of one symbol. Of a symbol that
-    is positive in the calc, hogging and sagging moments are kinds of their own, told apart by the
-    sort of part.
+    Moments of all symbols that the calc counts as negative are one kind: a few of them may be
+    positive under pattern loads. Of a symbol that is positive in the calc, hogging and sagging
+    moments are kinds of their own, told apart by the sort of part. A moment that stands in
+    several parts is one moment.
     """
-    signed = [claim for claim in claims if _has_sign(graph, claim)]
     negative = _negative(graph)
-    found: dict[str, Claim] = {}
-    for kind in (_wide, _narrow):
-        groups: dict[Hashable, list[Claim]] = {}
-        for claim in signed:
-            groups.setdefault(kind(graph[claim.id], negative), []).append(claim)
-        for key, group in groups.items():
-            if key and len(group) >= LEAST and all(_is_opposite(graph, c) for c in group):
-                found |= {claim.id: claim for claim in group}
-    return _told(graph, list(found.values()))
+    groups: dict[Hashable, list[Claim]] = {}
+    for claim in claims:
+        if _has_sign(graph, claim):
+            groups.setdefault(_kind(graph[claim.id], negative), []).append(claim)
+    found = [
+        claim
+        for group in groups.values()
+        if len({_moment_of(graph[claim.id]) for claim in group}) >= LEAST
+        and all(_is_opposite(graph, claim) for claim in group)
+        for claim in group
+    ]
+    return _told(graph, found)
 
 
 def in_our_signs(graph: Graph, claims: Sequence[Claim]) -> list[Claim]:
@@ -79,17 +81,19 @@ def _negative(graph: Graph) -> frozenset[str]:
     return frozenset(own for own, all_ in signs.items() if sum(all_) > MOSTLY * len(all_))
 
 
-def _wide(node: Node, negative: Container[str]) -> Hashable:
-    return stem(node.symbol) in negative
-
-
-def _narrow(node: Node, negative: Container[str]) -> Hashable:
+def _kind(node: Node, negative: Container[str]) -> Hashable:
     own = stem(node.symbol)
-    return own if own in negative else (own, node.part.partition("-")[0])
+    return "negative" if own in negative else (own, node.part.partition("-")[0])
+
+
+def _moment_of(node: Node) -> Hashable:
+    """Return what tells one moment from another: what it is worked of, else its own id."""
+    worked = str(node.entry.get("formula", "")).partition("=")[2]
+    return (worked, tuple(sorted(node.args.items()))) if node.is_computed else node.id
 
 
 def _turned(claim: Claim) -> Claim:
-    typed = claim.typed.removeprefix("-") if claim.typed.startswith("-") else f"-{claim.typed}"
+    typed = claim.typed[1:] if claim.typed.startswith("-") else f"-{claim.typed}"
     return replace(claim, typed=typed, value=-claim.value, stands_for=claim.stands_for.times(-1))
 
 

@@ -9,7 +9,7 @@ import math
 from collections.abc import Sequence
 
 from lineproof.audit.claims.other_methods import Other
-from lineproof.audit.data import Claim, Slip
+from lineproof.audit.data import Cause, Claim, Slip
 
 PLAUSIBLE = 0.15
 """Likelihood from which a slip is set beside a reading that is no error.
@@ -20,25 +20,28 @@ for another, or a digit typed for another, makes the one from the other.
 _SAME = 1e-6
 
 
-def plausible(slips: Sequence[Slip], claim: Claim, way: Other | None = None) -> Slip | None:
-    """Return the likeliest slip that gives a claim to its last digit; None if there is none.
+def plausible(
+    slips: Sequence[Slip], claim: Claim, way: Other | None = None
+) -> tuple[Slip, Cause] | None:
+    """Return the likeliest slip that gives a claim to its last digit, and which of its causes.
 
-    A result written wrongly is left out: every rounding differs by some digit from what it
-    rounds. So is a slip in lines above that nobody claimed: there are so many of them that one
-    fits most numbers. And so is what is nothing but the other ``way``, which puts its own values.
+    None if there is none. A result written wrongly is left out: every rounding differs by some
+    digit from what it rounds. So is a slip in lines above that nobody claimed: there are so many
+    of them that one fits most numbers. And so is what is nothing but the other ``way``, which puts
+    its own values.
     """
-    return next((s for s in slips if s.likely >= PLAUSIBLE and _counts(s, claim, way)), None)
+    likely = (s for s in slips if s.likely >= PLAUSIBLE and claim.stands_for.holds(s.value))
+    pairs = ((slip, cause) for slip in likely for cause in slip.causes)
+    return next((pair for pair in pairs if _counts(*pair, way)), None)
 
 
-def _counts(slip: Slip, claim: Claim, way: Other | None) -> bool:
-    replaced, took = slip.swap
-    miswritten = bool(took) and took == replaced
-    if slip.above or miswritten or not claim.stands_for.holds(slip.value):
+def _counts(slip: Slip, cause: Cause, way: Other | None) -> bool:
+    if cause.above or cause.miswritten:
         return False
     if way is None:
         return True
     same = math.isclose(slip.value, way.interval.middle, rel_tol=_SAME)
-    return took not in way.took and not (same and replaced in way.replaced)
+    return cause.took not in way.took and not (same and cause.replaced in way.replaced)
 
 
 def first_of(slips: Sequence[Slip], slip: Slip) -> tuple[Slip, ...]:

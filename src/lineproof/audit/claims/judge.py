@@ -12,10 +12,10 @@ from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
-from lineproof.audit.claims.rewritten import claimed_above, used_as_written, worked_rightly
+from lineproof.audit.claims.rewritten import used_as_written, worked_rightly
 from lineproof.audit.claims.safe_side import errs_safely
 from lineproof.audit.claims.twins import twins_of
-from lineproof.audit.claims.worlds import Worlds, unmoved_lines
+from lineproof.audit.claims.worlds import Worlds, claimed_above, unmoved_lines
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
 from lineproof.record.entry import DECISION
@@ -30,6 +30,7 @@ MISWRITTEN = (Verdict.ORIGIN, Verdict.UNIT)
 """Verdicts on lines that may have been written wrongly and used rightly."""
 _DIGITS = 4
 _MOVED = 1e-9
+_SIDES = {True: "conservative", False: "not conservative", None: "no check is moved by it"}
 
 
 def judge(
@@ -38,13 +39,12 @@ def judge(
     """Return a judgement per claim and per value that nobody claimed, in the order of the record.
 
     A claim is compared with what follows from the values that the claim itself uses. Where it
-    does not follow, four more readings are tried before it is called an origin: that later
-    lines were worked from right values, though a claimed one is wrong; that a value which stands
-    in several parts was changed in all; that a value above was written wrongly and used rightly;
-    and another way, a unit or a rounding. ``find`` looks for
-    the slip behind an origin; where a likely one gives what another way or a rounding gives as
-    well, the line is doubtful. Moments claimed in another sign convention are read in the calc's
-    own signs, and keep what was typed.
+    does not follow, more readings are tried before it is called an origin: that later lines were
+    worked from right values, though a claimed one is wrong; that a value which stands in several
+    parts was changed in all; that a value above was written wrongly and used rightly; then a slip
+    of units, another way, a rounding. ``find`` looks for the slip behind an origin; where a likely
+    one gives what another way or a rounding gives as well, the line is doubtful. Moments claimed
+    in another sign convention are read in the calc's own signs, and keep what was typed.
     """
     typed = {claim.id: claim.typed for claim in claims}
     found = _Judge(graph, in_our_signs(graph, claims), find).all()
@@ -62,6 +62,11 @@ _LAMBDA = re.compile(r"\blambda_(?!\w)")
 """The name of lambda in formulas, which are read as Python; a checker writes no underscore."""
 
 
+def _without_underscore(slip: Slip) -> Slip:
+    causes = tuple(replace(c, words=_LAMBDA.sub("lambda", c.words)) for c in slip.causes)
+    return replace(slip, sentence=_LAMBDA.sub("lambda", slip.sentence), causes=causes)
+
+
 class _Judge:
     """One run of judging; what has been judged so far decides what later claims carry."""
 
@@ -71,10 +76,10 @@ class _Judge:
         self.worker = Worker(graph)
         self.twins = twins_of(graph, self._deviating(), self.claims)
         self.worlds = self._worlds()
-        worlds = [self.worlds.claimed]
+        self.claimed_bench = Bench(self.worker, self.worlds.claimed, self.claims)
+        self.benches = [self.claimed_bench]
         if self.worlds.sound is not self.worlds.claimed:
-            worlds.append(self.worlds.sound)
-        self.benches = [Bench(self.worker, w, self.claims) for w in worlds]
+            self.benches.append(Bench(self.worker, self.worlds.sound, self.claims))
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
         self.verdicts: dict[str, Verdict] = {}
@@ -128,7 +133,8 @@ class _Judge:
         if not self.graph[claim.id].is_computed:
             return Form(right)
         # With as many digits as were written: 20 000 for 20 leaves 0.05 open there, and not 50.
-        size = abs(right / claim.value) if claim.value else 1.0
+        # Never more is open than as claimed: 0.5 for 539 mm says nothing of 485 to 593.
+        size = min(1.0, abs(right / claim.value)) if claim.value else 1.0
         return Form(right, {claim.id: claim.stands_for.half * size})
 
     # -- verdicts --------------------------------------------------------------------------
@@ -192,8 +198,7 @@ class _Judge:
 
     def _carried(self, node: Node, made: Judged) -> Judged:
         causes = self._causes(node)
-        # A twin may stand before the line whose claim it repeats, which is judged later.
-        wrong = tuple(i for i in causes if self.verdicts.get(i, Verdict.INPUT) in WRONG)
+        wrong = self._wrong_of(causes)
         if wrong:
             note = f"follows from {self._named(wrong)}"
             return replace(made, verdict=Verdict.CARRIED, note=note, causes=wrong)
@@ -204,25 +209,29 @@ class _Judge:
         """Return the wrong line above that was written wrongly, if this one was worked rightly."""
         wrong = [
             i
-            for i in claimed_above(self.graph, node, self.claims)
+            for i in claimed_above(self.graph, node.id, self.claims)
             if self.verdicts.get(i) in MISWRITTEN and self.graph[i].is_computed
         ]
         for i in wrong:
             if i not in self.as_written:
-                self.as_written[i] = used_as_written(self.benches[0], i)
+                self.as_written[i] = used_as_written(self.claimed_bench, i)
         unused = [i for i in wrong if not self.as_written[i]]
-        return worked_rightly(self.benches[0], node, claim, unused)
+        return worked_rightly(self.claimed_bench, node, claim, unused)
 
     def _worked_rightly(self, node: Node, made: Judged, miswritten: str) -> Judged:
         """Judge a line that follows from what a line above should be, not from it as claimed."""
         found = set(self._causes(node)) - {miswritten} | set(self._causes(self.graph[miswritten]))
         causes = tuple(i for i in self.claims if i in found)
-        wrong = tuple(i for i in causes if self.verdicts[i] in WRONG)
+        wrong = self._wrong_of(causes)
         note = f"follows from what {self._named([miswritten])} should be, not from it as claimed"
         if not wrong:
             return replace(made, note=note, causes=causes)
         note = f"{note}; carries {self._named(wrong)}"
         return replace(made, verdict=Verdict.CARRIED, note=note, causes=wrong)
+
+    def _wrong_of(self, causes: Sequence[str]) -> tuple[str, ...]:
+        """Return the causes that are wrong; a twin's claim may be judged only later."""
+        return tuple(i for i in causes if self.verdicts.get(i, Verdict.INPUT) in WRONG)
 
     def _unexplained(self, node: Node, claim: Claim, made: Judged) -> Judged:
         around = [made.follows, self.worlds.sound.follows[node.id].interval]
@@ -236,7 +245,7 @@ class _Judge:
         for rounded in coarse_roundings(claim, node.symbol, around):
             safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
             if rounded.usual or safe:
-                return self._rounded(node, claim, made, rounded, safe=safe is not False)
+                return self._rounded(node, claim, made, rounded, safe=safe)
         turned = self.turned.get(node.part)
         if turned:
             note = f"{self._turns(turned[-1])}, so that other expressions apply to this line"
@@ -248,10 +257,11 @@ class _Judge:
     ) -> Judged:
         """Judge a line with a reading that is no error: doubtful where a slip is likely as well."""
         slips = self._slips(node, claim)
-        slip = plausible(slips, claim, way)
-        if slip is None:
+        found = plausible(slips, claim, way)
+        if found is None:
             return replace(read, slips=slips if read.verdict in WRONG else ())
-        note = f"{read.note}; the same value is {slip.first}"
+        slip, cause = found
+        note = f"{read.note}; the same value is reproduced exactly with {cause.words}"
         return replace(read, verdict=Verdict.DOUBTFUL, note=note, slips=first_of(slips, slip))
 
     def _other_way(self, node: Node, claim: Claim) -> Other | None:
@@ -267,13 +277,13 @@ class _Judge:
         return f"with the values claimed {formula} ({node.label}) {state}"
 
     def _rounded(
-        self, node: Node, claim: Claim, made: Judged, rounded: Rounded, *, safe: bool
+        self, node: Node, claim: Claim, made: Judged, rounded: Rounded, *, safe: bool | None
     ) -> Judged:
         way = "up" if rounded.up else "down"
         shown = self._shown(node, rounded.of, _DIGITS + 1)
         note = f"{shown} rounded {way} to a step of {told(rounded.step, claim.unit)}"
-        verdict = Verdict.SAFE_ROUNDING if safe else Verdict.UNSAFE_ROUNDING
-        said = "conservative" if safe else "not conservative"
+        verdict = Verdict.UNSAFE_ROUNDING if safe is False else Verdict.SAFE_ROUNDING
+        said = _SIDES[safe]
         return self._beside_a_slip(
             node, claim, replace(made, verdict=verdict, note=f"{note}: {said}")
         )
@@ -282,7 +292,7 @@ class _Judge:
         if self.find is None:
             return ()
         slips = self.find(self.graph, node.id, self.used, claim, frozenset(self.claims))
-        return tuple(replace(slip, sentence=_LAMBDA.sub("lambda", slip.sentence)) for slip in slips)
+        return tuple(map(_without_underscore, slips))
 
     # -- what later lines carry ------------------------------------------------------------
 

@@ -14,11 +14,10 @@ from lineproof.audit.claims.propagate import Form, Worker, World, combined
 from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph, Node
 from lineproof.formula import names_of, parse_line
-from lineproof.formula.compiled import compile_tree
+from lineproof.formula.compiled import NOT_COMPUTED, compile_tree
 from lineproof.quantity.digits import significant
 from lineproof.record.entry import LINE, LOOKUP
 
-_CANNOT = (ArithmeticError, ValueError, TypeError)
 _PAIRS = {
     "beta": "beta_g", "theta": "theta_g", "V_c": "V_cg", "V_s": "V_sg", "V_r": "V_rg",
 }  # fmt: skip
@@ -117,7 +116,7 @@ def other_ways(bench: Bench, node: Node) -> Iterator[Other]:
     for way in _WAYS if node.is_computed else (_shear,):
         try:
             yield from way(bench, node)
-        except _CANNOT:
+        except NOT_COMPUTED:
             continue
 
 
@@ -267,12 +266,14 @@ def _was_worked(bench: Bench, node: Node) -> bool:
     """Tell whether a line's formula was worked, for which a table gives the result at once.
 
     Who wrote down the depth of the stress block did not read K_r, which is there to do without.
+    A factor of the materials, which has no unit, is written down with a table as well.
     """
     graph = bench.graph
     args = [target for name, target in node.args.items() if name not in (*_WIDTHS, "d")]
     return any(
         target in bench.claims
         and graph[target].is_computed
+        and graph[target].unit
         and not graph[target].symbol.startswith("A_s")
         for target in args
     )

@@ -17,12 +17,11 @@ from lineproof.audit.data import Interval
 from lineproof.audit.graph import Graph, Node
 from lineproof.errors import UserError
 from lineproof.formula import names_of
-from lineproof.formula.compiled import COMPARE, compile_tree
+from lineproof.formula.compiled import COMPARE, NOT_COMPUTED, compile_tree
 from lineproof.record.entry import DECISION, FOUND
 from lineproof.record.procedures import recall, run
 
 Function = Callable[..., float]
-_CANNOT = (ArithmeticError, ValueError, TypeError)
 """What working a formula raises; TypeError: a root of a negative number compared."""
 _SAME = 1e-12
 """Relative difference that is nothing but the rounding of floats."""
@@ -123,7 +122,7 @@ def _tried(function: Function, values: Sequence[float], otherwise: float) -> flo
     """
     try:
         return _finite(function(*values))
-    except _CANNOT:
+    except NOT_COMPUTED:
         return otherwise
 
 
@@ -220,7 +219,7 @@ class Worker:
             return recorded
         try:
             return self.form(node, used)
-        except (*_CANNOT, UserError) as error:
+        except (*NOT_COMPUTED, UserError) as error:
             failed[node.id] = str(error)
             return recorded
 
@@ -250,7 +249,7 @@ class Worker:
         values = {name: used[target].middle for name, target in node.args.items()}
         try:
             truth = node.compared(values)
-        except _CANNOT:
+        except NOT_COMPUTED:
             return True
         recorded = self.graph.truth(node.id)
         sign = node.sides[1]

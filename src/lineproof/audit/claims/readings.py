@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from decimal import Decimal
 
 from lineproof.audit.data import Claim, Interval, Slip
+from lineproof.audit.slips.scope import stem
 from lineproof.quantity.digits import number_text, significant
 from lineproof.quantity.units import UNITS, internal_factor, units_of_kind
 from lineproof.typeset.values import unit_text
@@ -21,13 +22,16 @@ _DIGIT_LESS = (10,)
 _BUILT = (5, 10)
 """Steps for sizes and areas; a size is in whole millimetres, a deflection to a tenth is none."""
 _SIZE = 1.0
-_LAID_OUT = ("s", "l", "x", "b", "h")
-_SET_OUT = (5, 10, 25, 50, 100)
-"""Steps for lengths that are set out on a drawing, by the first letters of their symbols.
+_LAID_OUT = frozenset((
+    "s", "s_b", "s_f", "s_tie", "s_max", "s_v", "l", "l_n", "l_d", "l_dh", "l_s", "l_lp", "l_in",
+    "l_e", "l_ext", "x_e", "x_co", "b_w", "b_f", "b_o", "b_s", "b_tr", "h", "h_f", "h_min",
+))  # fmt: skip
+"""Lengths that are set out on a drawing: spacings, lengths of bars and spans, widths, depths.
 
-Spacings, lengths along the beam, widths and overall depths; a depth within the section, such as d,
-a, c or d_v, is worked out and not chosen, so that nobody rounds it to 25 mm.
+Not those worked out within a section, such as d, a, c, d_v or s_z: nobody rounds them to 25 mm.
 """
+_SET_OUT = (5, 10, 25, 50, 100)
+"""Steps for lengths that are set out on a drawing."""
 _HALF = 0.5 + 1e-9
 """The nearest multiple is no farther than half a step."""
 _EXACT_DIGITS = 6
@@ -105,7 +109,7 @@ def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:
         return ()
     kind = UNITS[claim.unit].kind
     is_size = kind == "length" and 2 * claim.stands_for.half >= _SIZE * (1 - 1e-9)
-    if is_size and symbol.startswith(_LAID_OUT):
+    if is_size and stem(symbol) in _LAID_OUT:
         return _SET_OUT
     return _BUILT if is_size or kind == "area" else _DIGIT_LESS
 

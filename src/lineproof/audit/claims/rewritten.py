@@ -7,28 +7,13 @@ but what follows for the line from the values claimed.
 
 from __future__ import annotations
 
-from collections.abc import Container, Iterable, Iterator
+from collections.abc import Iterable
 
 from lineproof.audit.claims.other_methods import Bench
 from lineproof.audit.claims.worlds import next_claimed
 from lineproof.audit.data import Claim
-from lineproof.audit.graph import Graph, Node
-from lineproof.errors import UserError
-
-_CANNOT = (ArithmeticError, ValueError, TypeError, UserError)
-
-
-def claimed_above(graph: Graph, node: Node, claims: Container[str]) -> Iterator[str]:
-    """Give the claimed lines that a line rests on by lines that nobody claimed."""
-    waiting, seen = [node.id], {node.id}
-    while waiting:
-        for target in graph.sources[waiting.pop()]:
-            if target not in seen:
-                seen.add(target)
-                if target in claims:
-                    yield target
-                else:
-                    waiting.append(target)
+from lineproof.audit.graph import Node
+from lineproof.formula.compiled import NOT_COMPUTED
 
 
 def used_as_written(bench: Bench, entry_id: str) -> bool:
@@ -45,7 +30,7 @@ def used_as_written(bench: Bench, entry_id: str) -> bool:
         try:
             if not stands.meets(bench.reworked(graph[below], swapped).interval):
                 return True
-        except _CANNOT:
+        except NOT_COMPUTED:
             continue
     return False
 
@@ -60,7 +45,7 @@ def worked_rightly(bench: Bench, node: Node, claim: Claim, wrong: Iterable[str])
         swapped = {entry_id: bench.world.follows[entry_id]}
         try:
             made = bench.reworked(node, swapped)
-        except _CANNOT:
+        except NOT_COMPUTED:
             continue
         if claim.stands_for.meets(made.interval):
             return entry_id

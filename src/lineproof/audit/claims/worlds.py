@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Container, Mapping
+from collections.abc import Container, Iterable, Mapping
 from dataclasses import dataclass
 
 from lineproof.audit.claims.propagate import World
@@ -47,14 +47,26 @@ def _is_count(node: Node) -> bool:
 
 def next_claimed(graph: Graph, entry_id: str, claims: Container[str]) -> list[str]:
     """Return the claimed lines that rest on one by lines that nobody claimed."""
+    return _claimed_by(graph.users, graph, entry_id, claims)
+
+
+def claimed_above(graph: Graph, entry_id: str, claims: Container[str]) -> list[str]:
+    """Return the claimed lines that one rests on by lines that nobody claimed."""
+    return _claimed_by(graph.sources, graph, entry_id, claims)
+
+
+def _claimed_by(
+    steps: Mapping[str, Iterable[str]], graph: Graph, entry_id: str, claims: Container[str]
+) -> list[str]:
+    """Return the claimed lines that are reached by steps over lines that nobody claimed."""
     waiting, found = [entry_id], list[str]()
     seen: set[str] = set()
     while waiting:
-        for user in graph.users[waiting.pop()]:
-            if user in seen or not graph[user].has_value:
+        for other in steps[waiting.pop()]:
+            if other in seen or not graph[other].has_value:
                 continue
-            seen.add(user)
-            (found if user in claims else waiting).append(user)
+            seen.add(other)
+            (found if other in claims else waiting).append(other)
     return found
 
 

@@ -121,6 +121,8 @@ SINGLE: tuple[Expected, ...] = (
 """What the calc of one simple span holds, wherever in it."""
 
 
+_STILL_MADE = (flexure.STRENGTH, flexure.ENOUGH_STEEL, cutoff.EXTENDED)
+"""Checks that are made, and fail, where no bars stand."""
 _FEW = 4
 """So many places at which a check is made are named; of more it is said how many they are."""
 
@@ -153,11 +155,11 @@ def _is_design(record: Record) -> bool:
 
 def _missed(row: Expected, spots: Sequence[Spot]) -> Iterator[Finding]:
     """Give the finding of a check that is not made at every spot where it belongs."""
-    everywhere = row.where in (Where.BEAM, Where.SLAB)
+    always = row.where in (Where.BEAM, Where.SLAB) or any(t in _STILL_MADE for t in row.tests)
     made = {
         spot.name: ids
         for spot in spots
-        if (ids := spot.made(row.tests)) or everywhere or not spot.stopped
+        if (ids := spot.made(row.tests)) or always or not spot.stopped
     }
     without = [name for name, ids in made.items() if not ids]
     if not without:

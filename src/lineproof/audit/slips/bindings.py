@@ -5,9 +5,9 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from lineproof.audit.slips.edits import TOP, Edit, Line
-from lineproof.audit.slips.tree import FAILURES, real
+from lineproof.audit.slips.tree import real
 from lineproof.audit.slips.values import others_for
-from lineproof.errors import UserError
+from lineproof.formula.compiled import NOT_COMPUTED
 
 ONE_OF_MANY = 0.7
 """A slip at one place of a quantity that stands at several is less likely by so much."""
@@ -43,7 +43,7 @@ def edits_of_arguments(line: Line) -> Iterator[Edit]:
                 continue
             try:
                 made = real(line.node.compute(named | {name: other.value}))
-            except (*FAILURES, UserError):
+            except NOT_COMPUTED:
                 continue
             spread = abs(made) * relative
             swap = (target, other.took)

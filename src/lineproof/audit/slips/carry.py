@@ -8,8 +8,9 @@ from dataclasses import dataclass, field
 from lineproof.audit.graph import Node
 from lineproof.audit.slips.edits import Line
 from lineproof.audit.slips.scope import Pairs, Scope
-from lineproof.audit.slips.tree import FAILURES, Places, real
+from lineproof.audit.slips.tree import Places, real
 from lineproof.errors import UserError
+from lineproof.formula.compiled import NOT_COMPUTED
 
 STRAIGHT = 1e-9
 """A way bent by less than this part of its values counts as straight."""
@@ -175,7 +176,7 @@ def _straight(onward: Way, here: float) -> Way | None:
     step = abs(here) or 1.0
     try:
         low, middle, high = onward(here), onward(here + step / 2), onward(here + step)
-    except FAILURES:
+    except NOT_COMPUTED:
         return None
     if abs(high - 2 * middle + low) > STRAIGHT * max(abs(low), abs(high)):
         return None
@@ -187,7 +188,7 @@ def worked_or_none(way: Way, value: float) -> float | None:
     """Return what a way gives, or None where it gives no real number."""
     try:
         return way(value)
-    except FAILURES:
+    except NOT_COMPUTED:
         return None
 
 

@@ -10,7 +10,8 @@ from typing import NamedTuple
 
 from lineproof.audit.graph import Node
 from lineproof.audit.slips.scope import LOADS, Pairs, Scope
-from lineproof.audit.slips.tree import FAILURES, OPERATIONS, Pair, Place, Places, text_of
+from lineproof.audit.slips.tree import OPERATIONS, Pair, Place, Places, text_of
+from lineproof.formula.compiled import NOT_COMPUTED
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
 TOP = (0,)
@@ -26,7 +27,7 @@ class Edit(NamedTuple):
 
     ``far`` counts against it: by so much (natural logarithm) it is less likely than its family.
     ``swap`` are the ids of the value that is replaced and of the one that is taken for it, where
-    the edit puts a value for another; the same id twice says that a result was written wrongly.
+    the edit puts a value for another; ``miswritten`` says that a result was written wrongly.
     """
 
     family: str
@@ -36,6 +37,7 @@ class Edit(NamedTuple):
     words: Callable[[], str]
     far: float = 0.0
     swap: tuple[str, str] = ("", "")
+    miswritten: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -111,7 +113,7 @@ def workable(edits: Iterator[Edit]) -> Iterator[Edit]:
     """Give edits up to one that leaves the range of numbers or divides by nothing."""
     try:
         yield from edits
-    except FAILURES:
+    except NOT_COMPUTED:
         return
 
 

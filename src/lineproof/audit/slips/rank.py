@@ -7,7 +7,7 @@ from collections import Counter
 from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
-from lineproof.audit.data import Claim, Slip
+from lineproof.audit.data import Cause, Claim, Slip
 from lineproof.audit.slips.edits import Edit
 from lineproof.audit.slips.kinds import FAMILIES
 
@@ -86,11 +86,15 @@ def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
 
 def _slip(group: Group, claim: Claim) -> Slip:
     kind, *others = group.fits
-    first = group.fits[kind]
-    return Slip(
-        kind, _sentence(group, claim), group.value, group.share, tuple(others),
-        first.edit.swap, above=bool(first.where),
-    )  # fmt: skip
+    causes = tuple(map(_cause, group.fits.values()))
+    said = _sentence(causes, group.value, claim)
+    return Slip(kind, said, group.value, group.share, tuple(others), causes)
+
+
+def _cause(fit: Fit) -> Cause:
+    edit = fit.edit
+    words = f"{edit.words()}{fit.where}"
+    return Cause(words, *edit.swap, miswritten=edit.miswritten, above=bool(fit.where))
 
 
 class Group(NamedTuple):
@@ -120,11 +124,9 @@ def _equal(first: float, second: float) -> bool:
     return abs(first - second) <= _SAME * max(abs(first), abs(second))
 
 
-def _sentence(group: Group, claim: Claim) -> str:
+def _sentence(causes: Sequence[Cause], value: float, claim: Claim) -> str:
     """Say what gives the claimed value, and the other cause of the same value that is likeliest."""
-    fit, *others = group.fits.values()
-    how = "exactly" if claim.stands_for.holds(fit.value) else "within the digits of its arguments"
-    said = f"Reproduced {how} with {fit.edit.words()}{fit.where}."
-    if others:
-        said += f" The same value comes with {others[0].edit.words()}{others[0].where}."
-    return said
+    first, *others = causes
+    how = "exactly" if claim.stands_for.holds(value) else "within the digits of its arguments"
+    said = f"Reproduced {how} with {first.words}."
+    return f"{said} The same value comes with {others[0].words}." if others else said

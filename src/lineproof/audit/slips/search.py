@@ -14,10 +14,10 @@ from lineproof.audit.slips.edits import TOP, Edit, Line, edits_of, words_of
 from lineproof.audit.slips.numbers import edits_of_numbers
 from lineproof.audit.slips.rank import Fit, ranked, shares
 from lineproof.audit.slips.scope import Pairs, Scope, scope_of
-from lineproof.audit.slips.tree import FAILURES, Pair, Places
+from lineproof.audit.slips.tree import Pair, Places
 from lineproof.audit.slips.values import others_for
 from lineproof.audit.slips.whole import edits_of_copy, edits_of_result
-from lineproof.errors import UserError
+from lineproof.formula.compiled import NOT_COMPUTED
 
 FARTHER = 0.1
 """By so much (natural logarithm) a slip is less likely for each line it lies further up."""
@@ -178,7 +178,7 @@ def _claimed_line(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
         else:
             own[entry_id] = scope.graph.stored[entry_id], 0.0
         return Line(scope, node, _places(scope, own, node), own)
-    except (*FAILURES, UserError):
+    except NOT_COMPUTED:
         return None
 
 
@@ -206,7 +206,7 @@ def _line_above(scope: Scope, pairs: Pairs, entry_id: str) -> Line | None:
     node = scope.graph[entry_id]
     try:
         return Line(scope, node, _places(scope, pairs, node), pairs, above=True)
-    except FAILURES:
+    except NOT_COMPUTED:
         return None
 
 
@@ -240,7 +240,7 @@ def _tried(line: Line, edits: Sequence[Edit]) -> Tried:
     for edit in edits:
         try:
             worked.append((line.places.with_value(edit.at, edit.value), edit))
-        except FAILURES:
+        except NOT_COMPUTED:
             continue
     worked.sort(key=lambda pair: pair[0])
     ordered = [edit for _, edit in worked]
@@ -274,7 +274,7 @@ def _worked(
         if onward is not None:
             spread = onward.quick(value + half) - onward.quick(value) if half else 0.0
             value, half = onward.exact(value), abs(spread) + target.half
-    except FAILURES:
+    except NOT_COMPUTED:
         return None
     meets = target.claim.stands_for.meets(Interval(value - half, value + half))
     return (value, half) if meets else None

@@ -40,9 +40,6 @@ OPERATIONS: Mapping[str, Callable[..., Any]] = {
 }  # fmt: skip
 """What the operations of a tree do with floats; angles are in degrees."""
 
-FAILURES = (ArithmeticError, ValueError, TypeError)
-"""What an edited formula may raise; a complex number under ``min`` is a :class:`TypeError`."""
-
 
 @dataclass(frozen=True, slots=True)
 class Place:
@@ -110,7 +107,7 @@ def _half(operation: str, value: float, below: Sequence[Pair]) -> float:
 class Places:
     """A formula at the values of its arguments: each place with its value and half width.
 
-    Raises one of :data:`FAILURES` where the formula has no value there.
+    Raises one of :data:`NOT_COMPUTED` where the formula has no value there.
     """
 
     def __init__(self, places: Sequence[Place], named: Mapping[str, Pair]) -> None:

@@ -205,8 +205,11 @@ def _read_as(line: Line, target: str) -> str:
         number = Decimal(value / factor).quantize(Decimal(1).scaleb(round(unit)))
         return written(f"{number:f}")
     entry = node.entry
-    own = entry.get("typed", "") if node.kind == GIVEN else entry["printed"].get("result", "")
-    return written(str(own))
+    if node.kind != GIVEN:
+        return written(str(entry["printed"].get("result", "")))
+    # An input that was claimed otherwise is used as it was claimed, and read so.
+    as_ours = math.isclose(value, node.stored, rel_tol=WHOLE)
+    return written(str(entry.get("typed", "")) if as_ours else node.number_text(value))
 
 
 def _mistyped(line: Line, target: str, name: str, typed: str, number: str) -> str:

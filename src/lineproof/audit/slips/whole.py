@@ -169,8 +169,7 @@ def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
             words = partial("the result {} written as {}".format, meant, number)
             far = BY_ONE if _by_one_in_the_last(meant, number) else 0.0
             # What the claim would be if the line's own value had met the same slip.
-            own = line.node.id
-            yield Edit(family, TOP, claim.value + off, half, words, far, (own, own))
+            yield Edit(family, TOP, claim.value + off, half, words, far, miswritten=True)
 
 
 def _by_one_in_the_last(first: str, second: str) -> bool:
