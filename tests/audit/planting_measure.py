@@ -6,6 +6,7 @@ went wrong; a number behind it takes every so many beams only, a second one is a
 
 from __future__ import annotations
 
+import argparse
 import sys
 from collections import Counter
 from collections.abc import Iterable
@@ -175,6 +176,8 @@ def report(full: Tally, quick: Tally, *, faults: bool = False) -> str:
 
 
 if __name__ == "__main__":
-    GIVEN = [int(text) for text in sys.argv[1:]]
-    STEP, SEED = [*GIVEN, *[1, 0][len(GIVEN) :]]
-    sys.stdout.write(report(*measured(range(0, BEAMS, STEP), SEED), faults=True))
+    arguments = argparse.ArgumentParser(description=__doc__)
+    arguments.add_argument("step", nargs="?", type=int, default=1, help="every so many beams")
+    arguments.add_argument("seed", nargs="?", type=int, default=0)
+    given = arguments.parse_args()
+    sys.stdout.write(report(*measured(range(0, BEAMS, given.step), given.seed), faults=True))

@@ -87,8 +87,9 @@ def _count(made: Pairs, number: int, sheet: Sheet) -> None:
     for slip in sheet.planted:
         if slip.beyond:
             made.planted += 1
-            made.told += said[slip.id].verdict in (*FOUND, Verdict.DOUBTFUL)
-            if said[slip.id].verdict in CALM:
+            is_told = said[slip.id].verdict in (*FOUND, Verdict.DOUBTFUL)
+            made.told += is_told
+            if not is_told:
                 made.missed.append(f"beam {number}, {what}: {_told(said[slip.id])}")
     untouched = [i for i in claims if i not in sheet.touched]
     made.untouched += len(untouched)

@@ -459,3 +459,22 @@ def test_a_record_altered_in_many_lines_is_no_other_version() -> None:
     found = Verification("a.pdf", Outcome.ALTERED, (Proof("B1", "0" * 16, 4),), alterations)
 
     assert not verify_pdf.most_differ(found)
+
+
+def test_where_every_number_is_another_it_stays_altered_with_a_remark() -> None:
+    """Every digit of the working put for another: most lines differ, whoever did it."""
+    spots = [spot for spot in by.spots(by.pdf()) if spot.page == WORKING]
+
+    def others(operators: bytes) -> bytes:
+        heads = [m.span() for m in re.finditer(rb"/Artifact<<.*?EMC", operators, re.DOTALL)]
+        for spot in reversed(spots):  # from behind, so that the places before stay
+            if any(start < spot.start < end for start, end in heads):
+                continue  # head and foot of the page say which package it is of
+            digit = next(d for d in sorted(spot.codes) if d != spot.digit)
+            operators = spot.put(digit)(operators)
+        return operators
+
+    found = verify(by.redrawn(by.pdf(), WORKING, others), "a.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert found.remarks[-1] == verify_pdf.ANOTHER_VERSION

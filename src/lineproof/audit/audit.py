@@ -32,8 +32,9 @@ def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = 
     """
     graph = graph or Graph(record)
     with np.errstate(all="ignore"):  # absurd claims lead procedures to infinities: no value
-        judged = judge(graph, claims, searching())
-        notes = tuple(filter(None, [convention_of(graph, claims).sentence]))
+        convention = convention_of(graph, claims)
+        judged = judge(graph, claims, searching(), convention)
+        notes = (convention.sentence,) if convention.ids else ()
         return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged), notes)
 
 

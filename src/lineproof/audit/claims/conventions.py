@@ -54,10 +54,9 @@ def convention_of(graph: Graph, claims: Sequence[Claim]) -> Convention:
     return _told(graph, found)
 
 
-def in_our_signs(graph: Graph, claims: Sequence[Claim]) -> list[Claim]:
+def in_our_signs(claims: Sequence[Claim], convention: Convention) -> list[Claim]:
     """Return claims with those of another sign convention read in the calc's own signs."""
-    other = convention_of(graph, claims).ids
-    return [_turned(claim) if claim.id in other else claim for claim in claims]
+    return [_turned(claim) if claim.id in convention.ids else claim for claim in claims]
 
 
 def _has_sign(graph: Graph, claim: Claim) -> bool:

@@ -7,7 +7,7 @@ from collections.abc import Callable, Container, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
-from lineproof.audit.claims.conventions import in_our_signs
+from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
@@ -34,7 +34,10 @@ _SIDES = {True: "conservative", False: "not conservative", None: "no check is mo
 
 
 def judge(
-    graph: Graph, claims: Sequence[Claim], find: SlipFinder | None = None
+    graph: Graph,
+    claims: Sequence[Claim],
+    find: SlipFinder | None = None,
+    convention: Convention | None = None,
 ) -> tuple[Judged, ...]:
     """Return a judgement per claim and per value that nobody claimed, in the order of the record.
 
@@ -44,10 +47,12 @@ def judge(
     parts was changed in all; that a value above was written wrongly and used rightly; then a slip
     of units, another way, a rounding. ``find`` looks for the slip behind an origin; where a likely
     one gives what another way or a rounding gives as well, the line is doubtful. Moments claimed
-    in another sign convention are read in the calc's own signs, and keep what was typed.
+    in another sign ``convention``, sought if it is not given, are read in the calc's own signs, and
+    keep what was typed.
     """
     typed = {claim.id: claim.typed for claim in claims}
-    found = _Judge(graph, in_our_signs(graph, claims), find).all()
+    signs = convention or convention_of(graph, claims)
+    found = _Judge(graph, in_our_signs(claims, signs), find).all()
     return tuple(_as_typed(each, typed) for each in found)
 
 

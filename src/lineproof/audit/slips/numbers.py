@@ -12,6 +12,7 @@ from lineproof.audit.slips.edits import LOAD_FACTORS, TOP, Edit, Line, workable
 from lineproof.formula.tree import Number, Tree
 
 DEAD, LIVE = "1.25", "1.5"
+ALL_LEFT_OUT = "every load factor left out, specified loads for factored ones"
 
 
 def edits_of_numbers(line: Line) -> Iterator[Edit]:
@@ -25,14 +26,7 @@ def edits_of_numbers(line: Line) -> Iterator[Edit]:
 
 
 def _number(line: Line, at: int, text: str) -> Iterator[Edit]:
-    symbol = line.scope.stems[line.node.id]
-    own = _symbol_of(line.node)
-    others = of_constant(own, text, is_load=line.is_load)
-    if symbol != own:
-        others = (*others, *of_constant(symbol, text, is_load=False))
-    for other in others:
-        words = partial(_constant_said, other, text)
-        yield Edit("edition", (at,), other.value, 0.0, words)
+    yield from _other_constants(line, (at,), text, is_load=line.is_load)
     for typed in () if line.above else (*swapped(text), *changed(text)):
         words = partial("the constant {} mistyped as {}".format, text, typed)
         yield Edit("mistyped constant", (at,), float(typed), 0.0, words)
@@ -46,9 +40,20 @@ def _constants_together(line: Line) -> Iterator[Edit]:
             found.setdefault(place.tree.text, []).append(at)
     for text, places in found.items():
         if len(places) > 1:
-            for other in of_constant(_symbol_of(line.node), text, is_load=False):
-                words = partial(_constant_said, other, text)
-                yield Edit("edition", tuple(places), other.value, 0.0, words)
+            yield from _other_constants(line, tuple(places), text, is_load=False)
+
+
+def _other_constants(
+    line: Line, at: tuple[int, ...], text: str, *, is_load: bool
+) -> Iterator[Edit]:
+    """Give what other documents have for a constant, by the formula's symbol and by the line's."""
+    symbol = line.scope.stems[line.node.id]
+    own = _symbol_of(line.node)
+    others = of_constant(own, text, is_load=is_load)
+    if symbol != own:
+        others = (*others, *of_constant(symbol, text, is_load=False))
+    for other in others:
+        yield Edit("edition", at, other.value, 0.0, partial(_constant_said, other, text))
 
 
 def _constant_said(other: Other, text: str) -> str:
@@ -83,16 +88,13 @@ def _symbol_of(node: Node) -> str:
 
 
 def _service(line: Line) -> Iterator[Edit]:
-    """Give a sum of factored loads with every load factor left out, and with the two exchanged."""
+    """Give a sum of factored loads with every factor left out, and with one put for another."""
     if not line.is_load:
         return
     places = line.places.places
     at = [k for k, place in enumerate(places) if _is_load_factor(place.tree)]
     if len(at) > 1:
-        words = partial(
-            "{}".format, "every load factor left out, specified loads for factored ones"
-        )
-        yield Edit("service", tuple(at), 1.0, 0.0, words)
+        yield Edit("service", tuple(at), 1.0, 0.0, lambda: ALL_LEFT_OUT)
     for k in at:
         for other in {line.places.values[j] for j in at} - {line.places.values[k]}:
             words = partial("the load factor {:.4g} in place of {}".format, other, line.text(k))
