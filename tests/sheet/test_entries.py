@@ -486,3 +486,12 @@ def test_a_calc_id_is_a_short_text(calc_id: Any) -> None:
 def test_a_missing_project_file(tmp_path: Path) -> None:
     with pytest.raises(UserError, match="cannot be read \\(No such file"):
         Sheet.open("B1", project=tmp_path / "none.toml")
+
+
+def test_text_that_no_file_can_hold_is_refused_with_a_sentence() -> None:
+    sheet = Sheet("B1", project={"codes": {"pair": "NBC 2015 + A23.3-14"}})
+    with sheet.part("given", "Given"):
+        sheet.given("b", "400 mm")
+        sheet.note("why", "half of a sign: \ud800")
+    with pytest.raises(UserError, match="is neither text nor a finite number"):
+        sheet.close()
