@@ -18,8 +18,7 @@ _NUMBERED = re.compile(r"-\d+$")
 _STOPS = {
     test.key
     for test in (
-        shear.STRAIN_IN_RANGE, shear.BARS_IN_RANGE, deflection_stages.WHOLE,
-        deflection_stages.WHOLE_TOP,
+        shear.STRAIN_IN_RANGE, shear.BARS_IN_RANGE, *deflection_stages.NO_STIFFNESS,
     )
 }  # fmt: skip
 _NO_BARS = ("no-bars", "none-going-on")

@@ -22,6 +22,10 @@ Utilisation = Callable[[Mapping[str, float]], float]
 
 What cannot be computed with them may raise ``UserError``, ``ArithmeticError`` or ``ValueError``.
 """
+WIDEST_STIRRUPS, CLOSEST_STIRRUPS = 625.0, 75.0
+"""Spacings between which stirrups are sought [mm]; 600 is the widest there may be."""
+MOST_STEEL = 6000.0
+"""Area of bars up to which at least steel is sought [mm2]."""
 _COARSE = 16
 _LATER = 12
 _NOT_COMPUTED = (UserError, ArithmeticError, ValueError)
@@ -121,7 +125,7 @@ def less_steel(A_s: float, size: str) -> Variable:
     )
 
 
-def spacing(s: float, limit: float = 75) -> Variable:
+def spacing(s: float, limit: float = CLOSEST_STIRRUPS) -> Variable:
     """Return the spacing of the stirrups, in steps of 25 mm."""
     none = f"no spacing of the stirrups down to {limit:g} mm"
     return Variable(down(s, limit, 25), "stirrups at {} mm", "or less", none)

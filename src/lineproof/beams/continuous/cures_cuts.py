@@ -34,7 +34,6 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
 
 _PART = re.compile(r"anchorage-(bottom|top)-(\d+)-(left|right)-cut-(\d+)-shear")
-_WIDEST = 625.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -102,7 +101,8 @@ def _closer(design: Design, cut: Cut) -> Cure:
         values = {"V_f": V_f, "V_r": stretch_at(other, place).V_r}
         return cures_checks.used(clause.CUT_AT_LOW_SHEAR, values)
 
-    widest = max((b.spacing for b in check.bands if math.isfinite(b.spacing)), default=_WIDEST)
+    spacings = [b.spacing for b in check.bands if math.isfinite(b.spacing)]
+    widest = max(spacings, default=find.WIDEST_STIRRUPS)
     spaced = find.spacing(widest)
     variable = replace(spaced, words=f"stirrups at {{}} mm along span {side.span}")
     (cure,) = find.cures(use, {"s": variable})

@@ -44,7 +44,6 @@ _WORST = re.compile(r"coverage-(bottom|top)(-tension)?")
 _MOST_BARS = 8
 FROM = "from the axis of support 1"
 _LAYERS = (1, 2)
-_MOST_STEEL = 6000.0
 _NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
 Runs = tuple[BarRun, ...]
 
@@ -252,7 +251,7 @@ def section_gap_cures(check: Entry, value: Callable[[str], float], size: str) ->
     values |= {"h_f": bound["h_f"].value if "h_f" in bound else 0.0, "A_s": 0.0}
     use: Utilisation = cures_checks.bending(values)
     variable = replace(
-        find.steel(0.0, size, _MOST_STEEL), words="{} mm² of bars through this section"
+        find.steel(0.0, size, find.MOST_STEEL), words="{} mm² of bars through this section"
     )
     return list(find.cures(use, {"A_s": variable}))
 

@@ -166,7 +166,7 @@ def service_rows(model: Model) -> Iterator[Row]:
         part = parts.get(f"deflection-{span}")
         for key, entry in (part.entries if part is not None else {}).items():
             if entry.kind == "check" and key.startswith("deflection"):
-                whole = entry.source in (deflection_stages.WHOLE, deflection_stages.WHOLE_TOP)
+                whole = entry.source in deflection_stages.NO_STIFFNESS
                 yield _check_row(f"span {span}", entry, "kN.m" if whole else "mm")
 
 

@@ -89,6 +89,8 @@ WHOLE_TOP = _criterion(
     no="The section cracks and no bars count in it: it has NO stiffness, no deflection is given.",
     key="deflection-whole-top",
 )
+NO_STIFFNESS = (WHOLE, WHOLE_TOP)
+"""Checks that fail where a section without bars cracks: it has no stiffness."""
 GROSS = _formula(
     "I_e = I_g", clause="9.8.2.3", title="Effective moment of inertia, not cracked", basis=MECHANICS
 )
@@ -264,8 +266,7 @@ FORMULAS = (
 CRITERIA = (
     UNCRACKED,
     UNCRACKED_TOP,
-    WHOLE,
-    WHOLE_TOP,
+    *NO_STIFFNESS,
     RISE_SMALL,
     BOUND_SIMPLE,
     BOUND_ONE_END,
