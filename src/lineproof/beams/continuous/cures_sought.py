@@ -9,6 +9,7 @@ from dataclasses import dataclass, replace
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure, Utilisation, Variable
+from lineproof.beams.continuous.cures_developed import developed, here
 from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, behind, bound_names
 from lineproof.beams.continuous.cures_table import LONGER, MORE_AREA, SOUGHT
 from lineproof.record import Entry, Part
@@ -20,10 +21,8 @@ from lineproof.standards.a23_3.bars import BARS
 _BENDING = (flexure.STRENGTH, flexure.YIELDS, cutoff.SUFFICES)
 _FITS = bars.FITS.key
 NONE_IN_LAYER = "no number of bars {} in one layer"
-_WIDEST = 1500
+_LONGEST_SUPPORT = 1500
 _MOST_HANGERS = 20
-_MOST_STEEL = 6000.0
-"""Area up to which steel is sought, or four times what there is [mm2]."""
 _STEP = 10.0
 _COUNTS = ("n_b", "n_t", "n_1", "n_d")
 _SAME = 1e-9
@@ -58,10 +57,19 @@ def cures_of(check: Entry) -> list[Cure]:
     bound = bound_names(check)
     made = []
     for name in SOUGHT.get(test, ()):
-        sought = _sought(name, check, bound)
-        cure = None if sought is None else _cure(name, check, bound, sought)
+        cure = _by(name, check, bound)
         if cure is not None:
             made.append(cure)
+    return made
+
+
+def _by(name: str, check: Entry, bound: Mapping[str, Entry]) -> Cure | None:
+    """Return the cure by a name of ``SOUGHT``: of what it may mean, by the first that does."""
+    made = None
+    for sought in _sought(name, check, bound):
+        made = _cure(name, check, bound, sought)
+        if made is not None and made.value is not None:
+            return made
     return made
 
 
@@ -184,14 +192,18 @@ def _flange(bound: Mapping[str, Entry]) -> float:
 # -- what may be changed ---------------------------------------------------------------------
 
 
-def _sought(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
-    """Return what a name of ``SOUGHT`` means in a check; None where it is not in it."""
-    if name in ("A_s", "A_sd", "A_sp", "less A_s"):
+def _sought(name: str, check: Entry, bound: Mapping[str, Entry]) -> list[Sought]:
+    """Return what a name of ``SOUGHT`` means in a check; none where it is not in it."""
+    if name in ("A_s", "A_sd", "A_sp"):
         return _steel(name, check, bound)
-    if name == "bars":
-        return _sizes(check, bound)
-    if name == "number":
-        return _number(check)
+    makers = {"less A_s": _less_steel, "bars": _sizes, "number": _number}
+    maker = makers.get(name)
+    sought = _value(name, check, bound) if maker is None else maker(check, bound)
+    return [] if sought is None else [sought]
+
+
+def _value(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
+    """Return a given value of the beam or of the check."""
     root = _root(name, check, bound)
     if root is None:
         return None
@@ -236,24 +248,38 @@ def _hangers(number: float) -> Variable:
 
 
 def _support(width: float) -> Variable:
-    none = f"no support up to {_WIDEST} mm along the beam"
+    none = f"no support up to {_LONGEST_SUPPORT} mm along the beam"
     words = "a support {} mm long along the beam"
-    return Variable(find.up(width, _WIDEST, 10), words, "or more", none)
+    return Variable(find.up(width, _LONGEST_SUPPORT, 10), words, "or more", none)
 
 
-def _steel(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
-    root = bound.get("A_s" if name == "less A_s" else name)
-    size = None if root is None else _size_of(root)
-    if root is None or size is None or root.value <= 0:
+def _less_steel(check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
+    del check
+    root = bound.get("A_s")
+    sizes = () if root is None else _sizes_of(root)
+    if root is None or not sizes or root.value <= 0:
         return None
-    if name == "less A_s":
-        return _single("A_s", root, find.less_steel(root.value, size))
-    variable = find.steel(root.value, size, _most(root.value))
+    return _single("A_s", root, find.less_steel(root.value, sizes[-1]))
+
+
+def _steel(name: str, check: Entry, bound: Mapping[str, Entry]) -> list[Sought]:
+    root = bound.get(name)
+    sizes = () if root is None else _sizes_of(root)
+    if root is None or not sizes or root.value <= 0:
+        return []
+    variable = find.steel(root.value, sizes[-1], _most(root.value))
+    part = developed(root)
+    if part is not None:  # what stands already is told first, and no number of bars beside it
+        size = sizes[0] if len(sizes) == 1 else ""
+        better = Sought(
+            {name: (root,)}, part.variable(size), lambda value: {name: part.area(value)}
+        )
+        return [better, _single(name, root, here(variable))]
     # Elsewhere the depth may be that of other bars: whether more fit is said with the section.
     fits = check.part.entries.get(_FITS)
     if fits is None or "d_2" in check.part.entries:
-        return _single(name, root, variable)
-    return _in_one_layer(name, root, size, fits)
+        return [_single(name, root, variable)]
+    return [_in_one_layer(name, root, sizes[-1], fits)]
 
 
 def _in_one_layer(name: str, root: Entry, size: str, fits: Entry) -> Sought:
@@ -271,7 +297,7 @@ def _in_one_layer(name: str, root: Entry, size: str, fits: Entry) -> Sought:
 
 
 def _most(area: float) -> float:
-    return max(4 * area, _MOST_STEEL)
+    return max(4 * area, find.MOST_STEEL)
 
 
 def _more_bars(before: float, area: float, size: str) -> int:
@@ -285,27 +311,28 @@ def beside_each_other(part: Part, use: Utilisation) -> tuple[Utilisation, Variab
     known size. A changed ``A_s`` is the area of the section.
     """
     area = part.entries.get("A_s")
-    size = None if area is None else _size_of(area)
+    sizes = () if area is None else _sizes_of(area)
     fits = part.entries.get(_FITS)
-    if area is None or size is None or fits is None or "d_2" in part.entries:
+    if area is None or not sizes or fits is None or "d_2" in part.entries:
         return None
-    sought = _in_one_layer("A_s", area, size, fits)
+    sought = _in_one_layer("A_s", area, sizes[-1], fits)
     both = _beside("A_s", use, sought)
     return None if both is None else (both, sought.variable)
 
 
-def _size_of(area: Entry) -> str | None:
-    """Return the largest size of the bars that make up an area; None where none is known."""
+def _sizes_of(area: Entry) -> tuple[str, ...]:
+    """Return the sizes of the bars that make up an area, the largest last."""
     areas = {BARS.number(size, "A_b"): size for size in BARS.rows}
-    found = [
+    found = {
         e.value for e in behind(area)
         if e.kind == LOOKUP and e.unit == "mm2" and e.value in areas
-    ]  # fmt: skip
-    return areas[max(found)] if found else None
+    }  # fmt: skip
+    return tuple(areas[each] for each in sorted(found))
 
 
-def _number(check: Entry) -> Sought | None:
+def _number(check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
     """Return more bars of the same size beside each other in the web, as many as fit."""
+    del bound
     fits = check.part.entries.get(_FITS)
     if fits is None:
         return None
