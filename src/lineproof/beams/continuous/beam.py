@@ -12,7 +12,7 @@ from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.anchorage_chapter import record_anchorage
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
-from lineproof.beams.continuous.cures_flow import failing, record_cures
+from lineproof.beams.continuous.cures_flow import Found, failing, record_cures
 from lineproof.beams.continuous.deflections import (
     SERVICE,
     record_deflections,
@@ -62,13 +62,13 @@ class ContinuousBeam:
     """A beam on a sheet.
 
     Every number stands on the sheet, so that cells may be run again in any order. The beam itself
-    keeps the sheet, the checked inputs and the code pair, and the design it made last, for as long
-    as what that rests on is the same.
+    keeps the sheet, the checked inputs and the code pair, and the design it made last with the
+    cures found for it, for as long as what that rests on is the same.
     """
 
     def __init__(self, sheet: Sheet, inputs: ContinuousInputs, pair: CodePair) -> None:
         self.sheet, self.inputs, self.pair = sheet, inputs, pair
-        self._last: tuple[tuple[str, ...], Design] | None = None
+        self._last: tuple[tuple[str, ...], Design, Found] | None = None
 
     @property
     def model(self) -> Model:
@@ -78,6 +78,10 @@ class ContinuousBeam:
     @property
     def design(self) -> Design:
         """Bars and stirrups, given or chosen, from what stands on the sheet."""
+        return self._designed()[0]
+
+    def _designed(self) -> tuple[Design, Found]:
+        """Return the design and the cures found for it so far."""
         key = tuple(
             entry.digest
             for part in self.sheet.parts
@@ -85,13 +89,15 @@ class ContinuousBeam:
             for entry in part.entries.values()
         )
         if self._last is None or self._last[0] != key:
-            self._last = key, design_of(self.model, self.pair)
-        return replace(self._last[1], model=self.model)
+            self._last = key, design_of(self.model, self.pair), {}
+        _, design, cures = self._last
+        return replace(design, model=self.model), cures
 
     def _cure(self, part: Part) -> None:
         """Record in a part that is about to close what would cure the checks that fail in it."""
         if failing(part):
-            record_cures(self.design, part)
+            design, cures = self._designed()
+            record_cures(design, part, cures)
 
     def loads(self) -> None:
         """Record the columns that hold the beam and the load take-down."""
@@ -179,7 +185,7 @@ class ContinuousBeam:
             SCHEDULE_CALL,
         )  # fmt: skip
         with self.sheet.chapter(SUMMARY_CALL):
-            record_summary(self.design)
+            record_summary(*self._designed())
 
 
 def continuous_beam(

@@ -48,12 +48,13 @@ COLUMNS = [
 ]
 WIDTHS = (44.0, 44.0, 20.0, 0.0)
 TITLE = "What fails and what would cure it"
+Found = dict[tuple[str, str], list[Cure]]
+"""The cures found for one design, by id and digest of their checks; what is sought is added."""
 _DEFLECTIONS = (clause.LIVE_SMALL, clause.ATTACHED_SMALL, stages.RISE_SMALL)
 _PART = re.compile(r"deflection-(\d+)")
 _BARS = ("A_s", "A_sd")
 """Areas of bars: in a gap, further bars are told with their length instead."""
 _SAME = 1e-9
-_WIDEST, _LEAST = 625.0, 75.0
 
 
 def failing(part: Part) -> list[Entry]:
@@ -64,11 +65,11 @@ def failing(part: Part) -> list[Entry]:
     ]  # fmt: skip
 
 
-def record_cures(design: Design, part: Part) -> None:
+def record_cures(design: Design, part: Part, found: Found) -> None:
     """Record in the open part, after every check that fails, what would cure it."""
     said: dict[str, list[str]] = {}
     for check in failing(part):
-        said.setdefault(cure_text(design, check), []).append(check.symbol)
+        said.setdefault(cure_text(design, check, found), []).append(check.symbol)
     for text, keys in said.items():
         title = f"Cure: {_titles(part, keys)}"  # the note may stand far below the check
         design.model.sheet.note(f"cure-{keys[-1]}"[:60], text, title=title)
@@ -83,16 +84,24 @@ def _title(check: Entry) -> str:
     return title[:1].lower() + title[1:]
 
 
-def cure_text(design: Design, check: Entry) -> str:
+def cure_text(design: Design, check: Entry, found: Found) -> str:
     """Return in a sentence what would cure a check that fails; plainly where nothing is known."""
-    found = _cures(design, check)
-    return told(found) if found else _why_none(check)
+    made = _once(design, check, found)
+    return told(made) if made else _why_none(check)
 
 
 def _why_none(check: Entry) -> str:
-    if check.source in (stages.WHOLE, stages.WHOLE_TOP):
+    if check.source in stages.NO_STIFFNESS:
         return NONE_CROSS
     return NOT_SOUGHT
+
+
+def _once(design: Design, check: Entry, found: Found) -> list[Cure]:
+    """Return the cures of a check, sought if they are not found yet."""
+    key = check.id, check.digest
+    if key not in found:
+        found[key] = _cures(design, check)
+    return found[key]
 
 
 def _cures(design: Design, check: Entry) -> list[Cure]:
@@ -118,12 +127,12 @@ def _size(design: Design) -> str:
     return max(design.runs, key=lambda run: run.diameter).size
 
 
-def failing_rows(design: Design) -> Iterator[Row]:
+def failing_rows(design: Design, found: Found) -> Iterator[Row]:
     """Give a row for every check that fails, one for those of a part with the same cures."""
     for part in design.model.sheet.parts:
         rows: dict[str, list[Entry]] = {}
         for check in failing(part):
-            rows.setdefault(_briefly(design, check), []).append(check)
+            rows.setdefault(_briefly(design, check, found), []).append(check)
         for cure, checks in rows.items():
             worst = max(checks, key=lambda check: utilisation(check) or math.inf)
             titles = "; ".join(_title(check) for check in checks)
@@ -131,10 +140,10 @@ def failing_rows(design: Design) -> Iterator[Row]:
             yield Row((part.title, titles, ratio_text(worst), cure), worst)
 
 
-def _briefly(design: Design, check: Entry) -> str:
+def _briefly(design: Design, check: Entry, found: Found) -> str:
     """Return the cures alone, without what would not do; the whole sentence where none does."""
-    able = [cure.text for cure in _cures(design, check) if cure.value is not None]
-    return "; or ".join(able) if able else cure_text(design, check)
+    able = [cure.text for cure in _once(design, check, found) if cure.value is not None]
+    return "; or ".join(able) if able else cure_text(design, check, found)
 
 
 # -- stirrups where there are none -----------------------------------------------------------
@@ -149,7 +158,7 @@ def _stirrup_cures(model: Model, check: Entry) -> list[Cure]:
     names = ("f_c", "f_y", "phi_c", "phi_s", "lambda_", "E_s", "b_w")
     values = {name: sheet.find(name).value for name in names}
     values |= {name: bound[name].value for name in ("h", "d", "A_s", "M_f", "V_f")}
-    values |= {"A_v": sheet.entry(f"{STIRRUPS}/A_v").value, "s": _WIDEST}
+    values |= {"A_v": sheet.entry(f"{STIRRUPS}/A_v").value, "s": find.WIDEST_STIRRUPS}
     if model.inputs.shear_method == "simplified":
         del values["M_f"]
         row = "minimum stirrups or more"
@@ -160,8 +169,10 @@ def _stirrup_cures(model: Model, check: Entry) -> list[Cure]:
             cures_checks.shear_strength, cures_checks.stirrup_spacing, cures_checks.least_stirrups,
         )
     ]  # fmt: skip
-    none = f"no stirrups at {_LEAST:g} mm or more"
-    spaced = Variable(find.down(_WIDEST, _LEAST, 25), "stirrups at {} mm", "or less", none)
+    closest = find.CLOSEST_STIRRUPS
+    spacings = find.down(find.WIDEST_STIRRUPS, closest, 25)
+    none = f"no stirrups at {closest:g} mm or more"
+    spaced = Variable(spacings, "stirrups at {} mm", "or less", none)
     return list(find.cures(lambda changes: max(use(changes) for use in uses), {"s": spaced}))
 
 

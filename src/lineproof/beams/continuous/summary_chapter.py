@@ -10,7 +10,7 @@ from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.cures_flow import COLUMNS as FAILING_COLUMNS
 from lineproof.beams.continuous.cures_flow import TITLE as FAILING
 from lineproof.beams.continuous.cures_flow import WIDTHS as FAILING_WIDTHS
-from lineproof.beams.continuous.cures_flow import failing_rows
+from lineproof.beams.continuous.cures_flow import Found, failing_rows
 from lineproof.beams.continuous.deflection_figure import deflection_shapes_figure
 from lineproof.beams.continuous.deliverables import record_drawings
 from lineproof.beams.continuous.design import Design
@@ -71,13 +71,13 @@ _ENVELOPE = [
 _LOADS = ["Load", "Value"]
 
 
-def record_summary(design: Design) -> None:
-    """Record the summary: what governs everywhere, drawn and in tables."""
+def record_summary(design: Design, cures: Found) -> None:
+    """Record the summary: what governs everywhere, drawn and in tables; ``cures`` found so far."""
     model = design.model
     sheet = model.sheet
     with sheet.part(SUMMARY, "Summary of the beam"):
         record_drawings(design, DRAWN)
-        fails = list(failing_rows(design))
+        fails = list(failing_rows(design, cures))
         if fails:
             _table(sheet, "failing", FAILING, FAILING_COLUMNS, fails, FAILS, widths=FAILING_WIDTHS)
         for number, (key, title, columns, widths, rows) in enumerate(_tables(design)):
