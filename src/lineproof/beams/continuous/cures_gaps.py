@@ -1,6 +1,7 @@
 """What would close a gap in given bars: a longer bar, a further bar, smaller loads.
 
-Each is tried on the bars along the beam themselves: the cover of the span is computed again.
+Each is tried on the bars along the beam themselves: the cover of all spans is computed again, and
+the bars must lap, fit and be what may be given.
 """
 
 from __future__ import annotations
@@ -21,7 +22,8 @@ from lineproof.beams.continuous.cutoff import STEP, ceil50, floor50
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.detailing_data import Designed
-from lineproof.beams.continuous.detailing_given import fit
+from lineproof.beams.continuous.detailing_given import fit, section_bars_of
+from lineproof.beams.continuous.laps import bad_laps
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import provide, stand
 from lineproof.beams.continuous.resistance_cover import (
@@ -35,6 +37,7 @@ from lineproof.beams.continuous.resistance_cover import (
     yield_force,
 )
 from lineproof.beams.continuous.resistance_demand import NOTHING, SpanDemand, demand_of
+from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import flexure
 from lineproof.standards.a23_3.bars import BARS
@@ -44,6 +47,7 @@ _WORST = re.compile(r"coverage-(bottom|top)(-tension)?")
 _MOST_BARS = 8
 FROM = "from the axis of support 1"
 _LAYERS = (1, 2)
+NO_FURTHER = f"no further bars there, up to {_MOST_BARS} of one size where the web takes them,"
 _NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
 Runs = tuple[BarRun, ...]
 
@@ -74,41 +78,72 @@ def gap_cures(design: Design, gap: Gap) -> list[Cure]:
 
 @dataclass(frozen=True, eq=False, slots=True)
 class _Trial:
-    """A gap whose span is covered again with other bars or other loads.
+    """A gap whose beam is covered again with other bars or other loads.
 
-    ``bad`` tells which stations of the span belong to other gaps, which may stay.
+    ``demands`` are those of all spans, that of the gap first. ``bad`` tells which of their
+    stations belong to other gaps, which may stay; ``laps`` are those that fail already.
     """
 
     designed: Designed
     runs: Runs
     gap: Gap
-    demand: SpanDemand
-    bad: np.ndarray
+    demands: tuple[SpanDemand, ...]
+    bad: tuple[np.ndarray, ...]
+    laps: frozenset[tuple[int, int]]
 
     @classmethod
     def of(cls, design: Design, gap: Gap) -> _Trial:
-        demand = demand_of(design.designed, gap.span, COUNT)
-        now = _ratios(design.designed, design.runs, gap, demand)
-        inside = (demand.x >= gap.start) & (demand.x <= gap.end)
-        bad = (now > 1 + ROUND_OFF) & ~inside
-        return cls(design.designed, design.runs, gap, demand, bad)
+        designed, runs = design.designed, design.runs
+        spans = range(1, len(designed.outline.lengths) + 1)
+        order = sorted(spans, key=lambda span: span != gap.span)
+        demands = tuple(demand_of(designed, span, COUNT) for span in order)
+        bad = tuple(_bad(designed, runs, gap, demand) for demand in demands)
+        return cls(designed, runs, gap, demands, bad, bad_laps(designed, runs))
 
     def use(self, runs: Runs) -> float:
-        """Return the largest ratio of the span with other bars, other gaps left aside."""
-        made = _ratios(self.designed, runs, self.gap, self.demand)
-        return float(np.where(self.bad, 0.0, made).max())
+        """Return the largest ratio of the beam with other bars, other gaps left aside.
+
+        Infinite where they cannot be given so, or are lapped too little. The bars of the beam keep
+        their places among them.
+        """
+        if not _may_be_given(self.designed, runs) or bad_laps(self.designed, runs) - self.laps:
+            return np.inf
+        largest = 0.0
+        for demand, bad in zip(self.demands, self.bad, strict=True):
+            made = _ratios(self.designed, runs, self.gap, demand)
+            largest = max(largest, float(np.where(bad, 0.0, made).max()))
+            if not find.holds(largest):
+                break
+        return largest
 
     def with_loads(self, part: float) -> float:
-        """Return that with a part of all factored loads."""
+        """Return that of the span of the gap with a part of all factored loads."""
         forces = replace(self.designed.forces, factors=self.designed.forces.factors * part)
         designed = replace(self.designed, forces=forces)
         demand = demand_of(designed, self.gap.span, COUNT)
         made = _ratios(designed, self.runs, self.gap, demand)
-        return float(np.where(self.bad, 0.0, made).max())
+        return float(np.where(self.bad[0], 0.0, made).max())
+
+
+def _bad(designed: Designed, runs: Runs, gap: Gap, demand: SpanDemand) -> np.ndarray:
+    now = _ratios(designed, runs, gap, demand) > 1 + ROUND_OFF
+    inside = (demand.x >= gap.start) & (demand.x <= gap.end)
+    return now & ~(inside & (demand.span == gap.span))
+
+
+def _may_be_given(designed: Designed, runs: Runs) -> bool:
+    """Tell whether bars fit into the web, and stand at the sections as they may be given."""
+    if not fit(runs, designed.basis):
+        return False
+    try:
+        section_bars_of(runs, designed.outline, designed.bars.holders)
+    except UserError:
+        return False
+    return True
 
 
 def _ratios(designed: Designed, runs: Runs, gap: Gap, demand: SpanDemand) -> np.ndarray:
-    spans = np.full(len(demand.x), gap.span)
+    spans = np.full(len(demand.x), demand.span)
     provided = provide(designed, stand(designed, runs), gap.face, demand.x, spans)
     return ratios(demand.side(gap.face), provided, yield_force(designed))
 
@@ -155,13 +190,14 @@ def _moved(trial: _Trial, ending: Runs, starting: Runs) -> Cure | None:
     )
     if room < STEP:
         return None
-    others = tuple(run for run in trial.runs if run not in bars)
 
     def use(changes: Mapping[str, float]) -> float:
         more = changes["longer"]
-        made = (_grown(run, more * (run in starting), more * (run in ending)) for run in bars)
-        runs = (*others, *made)
-        return trial.use(runs) if fit(runs, designed.basis) else np.inf
+        return trial.use(
+            tuple(
+                _grown(run, more * (run in starting), more * (run in ending)) for run in trial.runs
+            )
+        )
 
     which = f"the {text_of(bars)} that {_place(bars[0], ending, starting)}"
     both = " at both ends" if ending and starting else ""
@@ -184,11 +220,13 @@ def _place(run: BarRun, ending: Runs, starting: Runs) -> str:
 
 def _further(trial: _Trial) -> Cure:
     """Return the cure by further bars over a gap: of the size nearby, else of a larger one."""
-    own = [run for run in trial.runs if run.face == trial.gap.face and run.place == "web"]
-    least = max((run.diameter for run in own), default=0.0)
+    gap = trial.gap
+    own = [run for run in trial.runs if run.face == gap.face and run.place == "web"]
+    beside = [run for run in own if run.start < gap.end and run.end > gap.start]
+    least = max((run.diameter for run in beside or own), default=0.0)
     sizes = [size for size in SIZES if BARS.number(size, "d_b") >= least] or [SIZES[-1]]
     made = (_of_size(trial, size) for size in sizes)
-    none = Cure("number", None, "no further bars there that fit into the web")
+    none = Cure("number", None, NO_FURTHER)
     return next((cure for cure in made if cure.value is not None), none)
 
 
@@ -200,26 +238,26 @@ def _of_size(trial: _Trial, size: str) -> Cure:
     start = max(floor50(gap.start - l_d), low + designed.end_cover)
     end = min(ceil50(gap.end + l_d), high - designed.end_cover)
     bar = replace(bar, start=start, end=end)
-    layers = {n: _layer(trial, replace(bar, number=n)) for n in range(1, _MOST_BARS + 1)}
+    tried: dict[int, tuple[float, int]] = {}
 
     def use(changes: Mapping[str, float]) -> float:
         number = int(changes["number"])
-        if not layers[number]:
-            return np.inf
-        return trial.use((*trial.runs, replace(bar, layer=layers[number], number=number)))
+        if number not in tried:
+            tried[number] = _in_a_layer(trial, replace(bar, number=number))
+        return tried[number][0]
 
     words = f"further bars {{}}-{size} from {start / 1e3:.2f} to {end / 1e3:.2f} m {FROM}"
-    variable = Variable(tuple(map(float, layers)), words, "or more", "")
-    (cure,) = find.cures(use, {"number": variable})
-    if cure.value is None or layers[int(cure.value)] == 1:
+    numbers = tuple(float(number) for number in range(1, _MOST_BARS + 1))
+    (cure,) = find.cures(use, {"number": Variable(numbers, words, "or more", "")})
+    if cure.value is None or tried[int(cure.value)][1] == 1:
         return cure
     return replace(cure, text=f"{cure.text}, in a second layer")
 
 
-def _layer(trial: _Trial, run: BarRun) -> int:
-    """Return the layer in which further bars fit; 0 for none."""
-    basis = trial.designed.basis
-    return next((k for k in _LAYERS if fit((*trial.runs, replace(run, layer=k)), basis)), 0)
+def _in_a_layer(trial: _Trial, run: BarRun) -> tuple[float, int]:
+    """Return the largest ratio with further bars, and the layer in which they may stand."""
+    made = ((trial.use((*trial.runs, replace(run, layer=layer))), layer) for layer in _LAYERS)
+    return min(made)
 
 
 def _smaller(trial: _Trial) -> Cure:

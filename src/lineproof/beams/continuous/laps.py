@@ -9,6 +9,7 @@ from lineproof.beams.continuous.anchorage import bar_of, develop, holds
 from lineproof.beams.continuous.cutoff import STEP, ceil50
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import level_pairs
 from lineproof.errors import UserError
 from lineproof.standards.a23_3 import laps as clause
 
@@ -21,16 +22,36 @@ def lap_length(designed: Designed, run: BarRun) -> float:
     return ceil50(develop(designed.basis, bar_of(designed, run)).lap / 2) * 2
 
 
-def lap_between(designed: Designed, first: BarRun, second: BarRun) -> float:
-    """Return the length of a lap of two runs, on the module of the ends.
+def lap_needed(designed: Designed, first: BarRun, second: BarRun) -> float:
+    """Return the least length of a class B lap of two runs [mm].
 
     Of different sizes: the larger of the lap of the thinner and the development of the thicker.
     """
     thin, thick = sorted((first, second), key=lambda run: run.diameter)
-    length = lap_length(designed, thin)
+    least = develop(designed.basis, bar_of(designed, thin)).lap
     if first.size == second.size:
-        return length
-    return max(length, ceil50(develop(designed.basis, bar_of(designed, thick)).l_d / 2) * 2)
+        return least
+    return max(least, develop(designed.basis, bar_of(designed, thick)).l_d)
+
+
+def lap_between(designed: Designed, first: BarRun, second: BarRun) -> float:
+    """Return the length of a lap of two runs, on the module of the ends."""
+    return ceil50(lap_needed(designed, first, second) / 2) * 2
+
+
+def bad_laps(designed: Designed, runs: Sequence[BarRun]) -> frozenset[tuple[int, int]]:
+    """Return the laps that are too short or of bars too thick to be lapped, by places in runs."""
+    return frozenset(
+        (i, j) for i, j in level_pairs(designed, runs) if not _laps(designed, runs[i], runs[j])
+    )
+
+
+def _laps(designed: Designed, first: BarRun, second: BarRun) -> bool:
+    long_enough = holds(
+        clause.LONG_ENOUGH,
+        l_s=lap_needed(designed, first, second), l_lp=first.end - second.start,
+    )  # fmt: skip
+    return long_enough and all(holds(clause.LAPPABLE, d_b=run.diameter) for run in (first, second))
 
 
 def cut_length(run: BarRun) -> float:
