@@ -16,8 +16,9 @@ import pytest
 from lineproof import beams
 from lineproof.beams.continuous import beam as flow
 from lineproof.beams.continuous import cures_checks
-from lineproof.beams.continuous.cures_flow import NOT_SOUGHT, failing
+from lineproof.beams.continuous.cures_flow import NOT_SOUGHT
 from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, bound_names
+from lineproof.beams.continuous.cures_tried import failing
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.record.entry import CHECK

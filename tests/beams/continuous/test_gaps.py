@@ -23,7 +23,7 @@ from typing import Any
 import pytest
 
 from lineproof import beams
-from lineproof.beams.continuous.cures_flow import failing
+from lineproof.beams.continuous.cures_tried import failing
 from lineproof.beams.continuous.resistance_cover import Gap, covered
 from lineproof.record import Record
 from lineproof.record.recompute import recompute

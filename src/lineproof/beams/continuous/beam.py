@@ -12,7 +12,15 @@ from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.anchorage_chapter import record_anchorage
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
-from lineproof.beams.continuous.cures_flow import Found, failing, record_cures
+from lineproof.beams.continuous.cures_flow import Found, record_cures
+from lineproof.beams.continuous.cures_tried import (
+    Failing,
+    Runs,
+    Tried,
+    failing,
+    failing_of,
+    row_of,
+)
 from lineproof.beams.continuous.deflections import (
     SERVICE,
     record_deflections,
@@ -39,7 +47,7 @@ from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
 from lineproof.beams.floor_beam import prepare
 from lineproof.quantity import QuantityInput
 from lineproof.record import Part
-from lineproof.sheet import Sheet
+from lineproof.sheet import Sheet, Trial
 from lineproof.standards.codes import CodePair
 
 LOADS_CALL, SPANS_CALL, ANALYSIS_CALL = "beam.loads()", "beam.spans()", "beam.analysis()"
@@ -63,11 +71,14 @@ class ContinuousBeam:
 
     Every number stands on the sheet, so that cells may be run again in any order. The beam itself
     keeps the sheet, the checked inputs and the code pair, and the design it made last with the
-    cures found for it, for as long as what that rests on is the same.
+    cures found for it, for as long as what that rests on is the same. Without ``cures`` none are
+    sought.
     """
 
-    def __init__(self, sheet: Sheet, inputs: ContinuousInputs, pair: CodePair) -> None:
-        self.sheet, self.inputs, self.pair = sheet, inputs, pair
+    def __init__(
+        self, sheet: Sheet, inputs: ContinuousInputs, pair: CodePair, *, cures: bool = True
+    ) -> None:
+        self.sheet, self.inputs, self.pair, self._cures = sheet, inputs, pair, cures
         self._last: tuple[tuple[str, ...], Design, Found] | None = None
 
     @property
@@ -89,13 +100,21 @@ class ContinuousBeam:
             for entry in part.entries.values()
         )
         if self._last is None or self._last[0] != key:
-            self._last = key, design_of(self.model, self.pair), {}
+            self._last = key, design_of(self.model, self.pair), Found(Tried(self._with_bars))
         _, design, cures = self._last
         return replace(design, model=self.model), cures
 
+    def _with_bars(self, runs: Runs) -> Failing:
+        """Return the checks that fail with other bars along the beam; the sheet stays as it is."""
+        inputs = replace(self.inputs, bar_runs=tuple(row_of(run) for run in runs))
+        beam = ContinuousBeam(Trial(self.sheet), inputs, self.pair, cures=False)
+        for call in (beam.flexure, beam.shear, beam.deflections, beam.anchorage):
+            call()
+        return failing_of(beam.sheet.parts)
+
     def _cure(self, part: Part) -> None:
         """Record in a part that is about to close what would cure the checks that fail in it."""
-        if failing(part):
+        if self._cures and failing(part):
             design, cures = self._designed()
             record_cures(design, part, cures)
 

@@ -35,8 +35,9 @@ _NOT_COMPUTED = (UserError, ArithmeticError, ValueError)
 class Variable:
     """A value that may be changed: what can be built, from the nearest to the farthest.
 
-    ``words`` tells a value ("a depth of {} mm"), ``beyond`` those farther on ("or more"), ``none``
-    that none of them would do. ``bar`` is a bar size: areas are told with the number of bars.
+    ``words`` tells a value ("a depth of {} mm"), ``beyond`` those farther on ("or more"; empty
+    where nothing is told of them), ``none`` that none of them would do. ``bar`` is a bar size:
+    areas are told with the number of bars.
     """
 
     values: tuple[float, ...]
@@ -201,7 +202,7 @@ def _cure(utilisation: Utilisation, symbol: str, variable: Variable) -> Cure:
         return Cure(symbol, None, variable.none)
     value, later = variable.values[place], variable.values[place + 1 :]
     samples = later[:: max(1, len(later) // _LATER)]
-    beyond = all(holds(used(each)) for each in (*samples, *later[-1:]))
+    beyond = bool(variable.beyond) and all(holds(used(x)) for x in (*samples, *later[-1:]))
     return Cure(symbol, value, variable.text(value, all_beyond=beyond), used(value))
 
 

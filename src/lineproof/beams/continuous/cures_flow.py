@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 import re
 from collections.abc import Iterable, Iterator, Mapping
-from dataclasses import replace
+from dataclasses import dataclass, field, replace
 
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
@@ -19,6 +19,7 @@ from lineproof.beams.continuous.cures_gaps import (
 )
 from lineproof.beams.continuous.cures_replay import bound_names
 from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
+from lineproof.beams.continuous.cures_tried import Tried, failing
 from lineproof.beams.continuous.deflection import Behind, SpanSection, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
 from lineproof.beams.continuous.deflection_service import Stage, StageMoments, span_behind
@@ -29,7 +30,6 @@ from lineproof.beams.continuous.shear_chapter import STIRRUPS
 from lineproof.beams.continuous.summary_tables import Row, ratio_text
 from lineproof.errors import UserError
 from lineproof.record import Entry, Part
-from lineproof.record.entry import CHECK
 from lineproof.record.printing import utilisation
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
@@ -48,8 +48,6 @@ COLUMNS = [
 ]
 WIDTHS = (44.0, 44.0, 20.0, 0.0)
 TITLE = "What fails and what would cure it"
-Found = dict[tuple[str, str], list[Cure]]
-"""The cures found for one design, by id and digest of their checks; what is sought is added."""
 _DEFLECTIONS = (clause.LIVE_SMALL, clause.ATTACHED_SMALL, stages.RISE_SMALL)
 _PART = re.compile(r"deflection-(\d+)")
 _BARS = ("A_s", "A_sd")
@@ -57,12 +55,15 @@ _BARS = ("A_s", "A_sd")
 _SAME = 1e-9
 
 
-def failing(part: Part) -> list[Entry]:
-    """Return the checks of a part that fail and are not accepted by the engineer."""
-    return [
-        entry for entry in part.entries.values()
-        if entry.kind == CHECK and not entry and "exception" not in (entry.extra or {})
-    ]  # fmt: skip
+@dataclass(frozen=True, eq=False, slots=True)
+class Found:
+    """The cures found for one design, by id and digest of their checks; what is sought is added.
+
+    ``tried`` calculates the beam with other bars.
+    """
+
+    tried: Tried
+    cures: dict[tuple[str, str], list[Cure]] = field(default_factory=dict)
 
 
 def record_cures(design: Design, part: Part, found: Found) -> None:
@@ -99,12 +100,12 @@ def _why_none(check: Entry) -> str:
 def _once(design: Design, check: Entry, found: Found) -> list[Cure]:
     """Return the cures of a check, sought if they are not found yet."""
     key = check.id, check.digest
-    if key not in found:
-        found[key] = _cures(design, check)
-    return found[key]
+    if key not in found.cures:
+        found.cures[key] = _cures(design, check, found.tried)
+    return found.cures[key]
 
 
-def _cures(design: Design, check: Entry) -> list[Cure]:
+def _cures(design: Design, check: Entry, tried: Tried) -> list[Cure]:
     model = design.model
     if check.source in _DEFLECTIONS:
         return _deflection_cures(model, check)
@@ -113,7 +114,7 @@ def _cures(design: Design, check: Entry) -> list[Cure]:
     gap = gap_of(design, check)
     if gap is not None:
         more = (cure for cure in cures_of(check) if cure.symbol not in _BARS)
-        return [*gap_cures(design, gap), *more]
+        return [*gap_cures(design, gap, tried), *more]
     cut = cut_of(design, check)
     if cut is not None:
         return cut_cures(design, cut)

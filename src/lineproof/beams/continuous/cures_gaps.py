@@ -18,6 +18,7 @@ from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.anchorage import development_length
 from lineproof.beams.continuous.cures import Cure, Utilisation, Variable
 from lineproof.beams.continuous.cures_replay import bound_names
+from lineproof.beams.continuous.cures_tried import Runs, Tried
 from lineproof.beams.continuous.cutoff import STEP, ceil50, floor50
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.design import Design
@@ -47,9 +48,10 @@ _WORST = re.compile(r"coverage-(bottom|top)(-tension)?")
 _MOST_BARS = 8
 FROM = "from the axis of support 1"
 _LAYERS = (1, 2)
+_FARTHER = (0.0, 250.0, 500.0)
+"""How much farther than a gap asks for bars are tried, where they may not end so near [mm]."""
 NO_FURTHER = f"no further bars there, up to {_MOST_BARS} of one size where the web takes them,"
 _NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
-Runs = tuple[BarRun, ...]
 
 
 def gap_of(design: Design, check: Entry) -> Gap | None:
@@ -70,9 +72,12 @@ def _around(found: Coverage, face: Face, *, tension: bool) -> Gap | None:
     return next((gap for gap in found.gaps if gap.holds(at)), None)
 
 
-def gap_cures(design: Design, gap: Gap) -> list[Cure]:
-    """Return what would close a gap, each verified by covering the span again."""
-    trial = _Trial.of(design, gap)
+def gap_cures(design: Design, gap: Gap, tried: Tried) -> list[Cure]:
+    """Return what would close a gap, each verified by covering the beam again.
+
+    Bars are verified by the whole calculation too: no check fails with them that holds now.
+    """
+    trial = _Trial.of(design, gap, tried)
     return [*_longer(trial), _further(trial), _smaller(trial)]
 
 
@@ -90,15 +95,16 @@ class _Trial:
     demands: tuple[SpanDemand, ...]
     bad: tuple[np.ndarray, ...]
     laps: frozenset[tuple[int, int]]
+    tried: Tried
 
     @classmethod
-    def of(cls, design: Design, gap: Gap) -> _Trial:
+    def of(cls, design: Design, gap: Gap, tried: Tried) -> _Trial:
         designed, runs = design.designed, design.runs
         spans = range(1, len(designed.outline.lengths) + 1)
         order = sorted(spans, key=lambda span: span != gap.span)
         demands = tuple(demand_of(designed, span, COUNT) for span in order)
         bad = tuple(_bad(designed, runs, gap, demand) for demand in demands)
-        return cls(designed, runs, gap, demands, bad, bad_laps(designed, runs))
+        return cls(designed, runs, gap, demands, bad, bad_laps(designed, runs), tried)
 
     def use(self, runs: Runs) -> float:
         """Return the largest ratio of the beam with other bars, other gaps left aside.
@@ -115,6 +121,10 @@ class _Trial:
             if not find.holds(largest):
                 break
         return largest
+
+    def stands(self, runs: Runs) -> bool:
+        """Tell whether other bars close the gap and no check fails that does not fail now."""
+        return find.holds(self.use(runs)) and self.tried.fails_no_more(runs, self.runs)
 
     def with_loads(self, part: float) -> float:
         """Return that of the span of the gap with a part of all factored loads."""
@@ -191,18 +201,21 @@ def _moved(trial: _Trial, ending: Runs, starting: Runs) -> Cure | None:
     if room < STEP:
         return None
 
-    def use(changes: Mapping[str, float]) -> float:
-        more = changes["longer"]
-        return trial.use(
-            tuple(
-                _grown(run, more * (run in starting), more * (run in ending)) for run in trial.runs
-            )
+    def longer(more: float) -> Runs:
+        return tuple(
+            _grown(run, more * (run in starting), more * (run in ending)) for run in trial.runs
         )
 
     which = f"the {text_of(bars)} that {_place(bars[0], ending, starting)}"
     both = " at both ends" if ending and starting else ""
-    (cure,) = find.cures(use, {"longer": find.longer(room, which, both)})
-    return cure
+    variable = replace(find.longer(room, which, both), beyond="")
+    (cure,) = find.cures(lambda changes: trial.use(longer(changes["longer"])), {"longer": variable})
+    if cure.value is None:
+        return cure
+    for more in (cure.value + farther for farther in _FARTHER):
+        if more <= room and trial.stands(longer(more)):
+            return replace(cure, value=more, text=variable.text(more, all_beyond=False))
+    return Cure("longer", None, f"{variable.none}, or none without another check failing,")
 
 
 def _grown(run: BarRun, before: float, after: float) -> BarRun:
@@ -227,37 +240,41 @@ def _further(trial: _Trial) -> Cure:
     sizes = [size for size in SIZES if BARS.number(size, "d_b") >= least] or [SIZES[-1]]
     made = (_of_size(trial, size) for size in sizes)
     none = Cure("number", None, NO_FURTHER)
-    return next((cure for cure in made if cure.value is not None), none)
+    return next((cure for cure in made if cure is not None), none)
 
 
-def _of_size(trial: _Trial, size: str) -> Cure:
-    """Return the cure by further bars of a size that are developed on both sides of a gap."""
+def _of_size(trial: _Trial, size: str) -> Cure | None:
+    """Return the cure by further bars of a size that are developed on both sides of a gap.
+
+    They reach farther where they may not end so near to it. None where no number closes the gap.
+    """
     gap, designed = trial.gap, trial.designed
     bar = BarRun(gap.face, 1, 2, size, gap.start, gap.end)
     l_d, (low, high) = development_length(designed, bar), designed.outline.ends
-    start = max(floor50(gap.start - l_d), low + designed.end_cover)
-    end = min(ceil50(gap.end + l_d), high - designed.end_cover)
-    bar = replace(bar, start=start, end=end)
-    tried: dict[int, tuple[float, int]] = {}
-
-    def use(changes: Mapping[str, float]) -> float:
-        number = int(changes["number"])
-        if number not in tried:
-            tried[number] = _in_a_layer(trial, replace(bar, number=number))
-        return tried[number][0]
-
-    words = f"further bars {{}}-{size} from {start / 1e3:.2f} to {end / 1e3:.2f} m {FROM}"
-    numbers = tuple(float(number) for number in range(1, _MOST_BARS + 1))
-    (cure,) = find.cures(use, {"number": Variable(numbers, words, "or more", "")})
-    if cure.value is None or tried[int(cure.value)][1] == 1:
-        return cure
-    return replace(cure, text=f"{cure.text}, in a second layer")
+    for farther in _FARTHER:
+        start = max(floor50(gap.start - l_d) - farther, low + designed.end_cover)
+        end = min(ceil50(gap.end + l_d) + farther, high - designed.end_cover)
+        made = _number_of(trial, replace(bar, start=start, end=end))
+        if made is None:
+            return None
+        if trial.stands((*trial.runs, made)):
+            layer = "" if made.layer == 1 else ", in a second layer"
+            text = (
+                f"further bars {made.number}-{size} from {start / 1e3:.2f} to {end / 1e3:.2f} m "
+                f"{FROM}{layer}"
+            )
+            return Cure("number", made.number, text, trial.use((*trial.runs, made)))
+    return Cure("number", None, f"{NO_FURTHER} or none without another check failing,")
 
 
-def _in_a_layer(trial: _Trial, run: BarRun) -> tuple[float, int]:
-    """Return the largest ratio with further bars, and the layer in which they may stand."""
-    made = ((trial.use((*trial.runs, replace(run, layer=layer))), layer) for layer in _LAYERS)
-    return min(made)
+def _number_of(trial: _Trial, bar: BarRun) -> BarRun | None:
+    """Return the fewest of further bars that close a gap, in the first layer that takes them."""
+    for number in range(1, _MOST_BARS + 1):
+        for layer in _LAYERS:
+            made = replace(bar, number=number, layer=layer)
+            if find.holds(trial.use((*trial.runs, made))):
+                return made
+    return None
 
 
 def _smaller(trial: _Trial) -> Cure:
