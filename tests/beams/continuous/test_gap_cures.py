@@ -5,8 +5,15 @@ The beam is that of ``test_gaps``.
 
 from __future__ import annotations
 
+import re
+from typing import Any
+
 import pytest
 
+from lineproof import beams
+from lineproof.beams.continuous.cures_tried import failing, failing_of
+from lineproof.beams.continuous.resistance_cover import Gap
+from lineproof.errors import UserError
 from lineproof.sheet import Sheet
 
 from .flow import CALLS, run, start
@@ -19,17 +26,31 @@ from .test_gaps import (
     LEFT,
     OVER,
     RIGHT,
+    RUNS,
     Row,
     built,
     cure,
+    gaps_of,
+    row,
     swapped,
 )
 
+AXIS = "m from the axis of support 1"
+
 
 @pytest.fixture(scope="module")
-def sheet() -> Sheet:
+def existing() -> tuple[beams.ContinuousBeam, Sheet]:
+    """The beam with gaps and its sheet."""
+    return built()
+
+
+Existing = tuple[beams.ContinuousBeam, Sheet]
+
+
+@pytest.fixture(scope="module")
+def sheet(existing: Existing) -> Sheet:
     """The sheet of the beam with gaps."""
-    return built()[1]
+    return existing[1]
 
 
 def checked(part: str, check: str, runs: list[Row], calls: tuple[str, ...] = CALLS) -> bool:
@@ -70,3 +91,139 @@ def test_no_number_of_bars_is_told_where_those_that_stand_are_not_enough() -> No
     text = cure(sheet, "shear-1-right")
     assert "mm² of bars developed here or more" in text
     assert "-15M)" not in text
+
+
+# Laps of 20M, class B: 1.3*683.6 = 888.6 mm. 1600 mm more make 2300 + 1600 - 3000 = 900 mm of lap,
+# 1550 mm make 850 mm, though the moments would be covered with 1450 mm. Further 4-20M are lapped
+# with both of the 4-20M; 3-20M are no lap of these and would have to stand in a second layer.
+TOLD: list[tuple[tuple[str, ...], str, list[Row], list[Row]]] = [
+    (
+        ("coverage-bottom",), f"the 4-20M that end 2.30 {AXIS} made 1600 mm longer",
+        swapped(LEFT, LEFT | {"end": "3.90 m"}), swapped(LEFT, LEFT | {"end": "3.85 m"}),
+    ),
+    (
+        ("coverage-bottom",), f"the 4-20M that begin 3.00 {AXIS} made 1600 mm longer",
+        swapped(RIGHT, RIGHT | {"start": "1.40 m"}), swapped(RIGHT, RIGHT | {"start": "1.45 m"}),
+    ),
+    (
+        ("coverage-bottom",), f"further bars 4-20M from 1.05 to 4.25 {AXIS}",
+        [*RUNS, row("bottom", "4-20M", 1.05, 4.25)],
+        [*RUNS, row("bottom", "3-20M", 1.05, 4.25, layer=2)],
+    ),
+    (
+        ("coverage-top", "coverage-gap-5"),
+        f"the 3-25M that stand from 5.10 to 6.90 {AXIS} made 1050 mm longer at both ends",
+        swapped(OVER, row("top", "3-25M", 4.05, 7.95)),
+        swapped(OVER, row("top", "3-25M", 4.10, 7.90)),
+    ),
+    (
+        ("coverage-gap-1",), f"further bars 2-20M from -0.10 to 0.95 {AXIS}",
+        [*RUNS, row("bottom", "2-20M", -0.1, 0.95)], [*RUNS, row("bottom", "1-20M", -0.1, 0.95)],
+    ),
+    (
+        ("coverage-gap-4",), f"further bars 2-20M from 11.05 to 12.10 {AXIS}",
+        [*RUNS, row("bottom", "2-20M", 11.05, 12.1)], [*RUNS, row("bottom", "1-20M", 11.05, 12.1)],
+    ),
+]  # fmt: skip
+"""Parts, the cure told in them, the bars with it, the bars with a step less."""
+
+
+def gap_in(beam: beams.ContinuousBeam, part: str) -> Gap:
+    """The gap that a part of the cover by bars stands for."""
+    gaps = gaps_of(beam)
+    if part.startswith("coverage-gap-"):
+        return gaps[int(part.removeprefix("coverage-gap-")) - 1]
+    face = part.removeprefix("coverage-")
+    return next(g for g in gaps if g.face == face and g.worst == float("inf"))
+
+
+@pytest.mark.parametrize(("parts", "words", "good", "less"), TOLD)
+def test_a_told_cure_closes_its_gap_and_fails_nothing_else(
+    existing: Existing, parts: tuple[str, ...], words: str, good: list[Row], less: list[Row]
+) -> None:
+    """Typed in and calculated anew through all calls; with a step less something does not hold."""
+    beam, sheet = existing
+    assert all(words in cure(sheet, part) for part in parts)
+    assert cured(beam, sheet, parts[0], good)
+    assert not cured(beam, sheet, parts[0], less)
+
+
+def cured(beam: beams.ContinuousBeam, sheet: Sheet, part: str, runs: list[Row]) -> bool:
+    """Whether other bars close the gap of a part, and nothing fails that did not before."""
+    was, changed = gap_in(beam, part), start(**EXISTING, bar_runs=runs)
+    now = run(changed)
+    before, after = gaps_of(beam), gaps_of(changed)
+    closed = not [g for g in after if within(was, g)]
+    spread = [g for g in after if not any(within(old, g) for old in before)]
+    return closed and not spread and failing_of(now.parts) <= failing_of(sheet.parts)
+
+
+def within(old: Gap, new: Gap) -> bool:
+    """Whether a gap lies in one of before."""
+    same = (old.face, old.span) == (new.face, new.span)
+    return same and old.start <= new.start and new.end <= old.end
+
+
+def test_every_cure_of_bars_that_is_told_is_typed_in_above(sheet: Sheet) -> None:
+    for part in sheet.parts:
+        if part.key.startswith("coverage"):
+            text = cure(sheet, part.key)
+            typed = sum(words in text for parts, words, _, _ in TOLD if part.key in parts)
+            assert len(re.findall(r"further bars \d|mm longer", text)) == typed
+
+
+def test_further_bars_of_another_size_are_told_in_a_layer_of_their_own() -> None:
+    """7-20M fit beside 2-15M in a web of 700 mm: (617.4 - 2*16 - 7*19.5)/8 = 56 mm clear.
+
+    One size a layer is asked for at the middle of a span, so a second layer is told.
+    """
+    wide = EXISTING | {
+        "b_w": "700 mm", "live_load": "14 kPa",
+        "stirrups": [{"span": k, "spacing": "100 mm"} for k in (1, 2)],
+    }  # fmt: skip
+    standing = [row("bottom", "2-15M", -0.1, 12.1), row("top", "5-25M", -0.1, 12.1)]
+    sheet = run(start(**wide, bar_runs=standing))
+    assert f"further bars 7-20M from -0.10 to 6.15 {AXIS}, in a second layer" in cure(
+        sheet, "coverage-bottom"
+    )
+    further = row("bottom", "7-20M", -0.1, 6.15)
+    through = CALLS[: CALLS.index("flexure") + 1]
+    with pytest.raises(UserError, match="write one size a layer"):
+        run(start(**wide, bar_runs=[*standing, further]), through)
+    assert checked_in(wide, [*standing, further | {"layer": 2}])
+
+
+def checked_in(inputs: dict[str, Any], runs: list[Row]) -> bool:
+    """Whether bars are taken, and leave no gap in the bottom bars of span 1."""
+    beam = start(**inputs, bar_runs=runs)
+    run(beam)
+    return not [g for g in gaps_of(beam) if (g.face, g.span) == ("bottom", 1)]
+
+
+def test_every_check_that_is_solved_apart_gets_its_cure() -> None:
+    """Gaps, bars cut in tension, deflections: which place a check stands for is in its part's key.
+
+    A part called otherwise would be told a cure of its section alone, or none.
+    """
+    rows = [
+        row("bottom", "4-25M", -0.15, 17.5), row("bottom", "2-25M", 19.5, 24.55),
+        row("top", "2-25M", -0.15, 24.55), row("top", "2-25M", 6.9, 24.55),
+    ]  # fmt: skip
+    stirrups = [{"span": k, "spacing": "250 mm"} for k in (1, 2, 3)]
+    sheet = run(start(bar_runs=rows, stirrups=stirrups, live_load="6 kPa", h="450 mm"))
+    marks = {
+        "cut-low-shear": "that end here made", "deflection-attached": "a depth of",
+        "strength": "all loads, dead load too|no smaller loads",
+        "bars-tension-side": "all loads, dead load too|no smaller loads",
+    }  # fmt: skip
+    told: set[str] = set()
+    for part in sheet.parts:
+        kind = re.sub(r"\d+", "n", part.key)
+        for check in failing(part):
+            if kind.startswith(("coverage", "deflection", "anchorage-top-n-left-cut")):
+                assert re.search(marks[check.symbol], cure(sheet, part.key)), part.key
+                told.add(kind)
+    assert told == {
+        "anchorage-top-n-left-cut-n-shear", "deflection-n", "coverage-bottom",
+        "coverage-bottom-tension", "coverage-top", "coverage-top-tension", "coverage-gap-n",
+    }  # fmt: skip

@@ -202,54 +202,6 @@ def swapped(old: Row, new: Row) -> list[Row]:
     return [new if each is old else each for each in RUNS]
 
 
-@pytest.mark.parametrize(
-    ("part", "words", "good", "bad"),
-    [
-        (
-            "coverage-bottom",
-            "the 4-20M that end 2.30 m from the axis of support 1 made 1450 mm longer",
-            swapped(LEFT, row("bottom", "4-20M", -0.1, 3.75)),
-            swapped(LEFT, row("bottom", "4-20M", -0.1, 3.7)),
-        ),
-        (
-            "coverage-bottom",
-            "further bars 4-20M from 1.05 to 4.25 m from the axis of support 1",
-            [*RUNS, row("bottom", "4-20M", 1.05, 4.25, layer=2)],
-            [*RUNS, row("bottom", "3-20M", 1.05, 4.25, layer=2)],
-        ),
-        (
-            "coverage-top",
-            "6.90 m from the axis of support 1 made 1050 mm longer at both ends",
-            swapped(OVER, row("top", "3-25M", 4.05, 7.95)),
-            swapped(OVER, row("top", "3-25M", 4.10, 7.90)),
-        ),
-        (
-            "coverage-gap-1",
-            "further bars 2-20M from -0.10 to 0.95 m from the axis of support 1",
-            [*RUNS, row("bottom", "2-20M", -0.1, 0.95)],
-            [*RUNS, row("bottom", "1-20M", -0.1, 0.95)],
-        ),
-    ],
-)  # fmt: skip
-def test_cures_close_their_gap_and_less_does_not(
-    existing: Existing, part: str, words: str, good: list[Row], bad: list[Row]
-) -> None:
-    """Each is typed as bars of the beam: with it the gap is gone, with a step less it is not."""
-    beam, sheet, _ = existing
-    assert words in cure(sheet, part)
-    face = "top" if "top" in part else "bottom"
-    start_at = {"coverage-bottom": 1766, "coverage-top": 4255, "coverage-gap-1": 150}[part]
-    was = next(g for g in gaps_of(beam) if g.face == face and abs(g.start - start_at) < 1)
-    for runs, holds in ((good, True), (bad, False)):
-        changed = start(**EXISTING, bar_runs=runs)
-        run(changed, CALLS[: CALLS.index("flexure")])
-        left = [
-            g for g in gaps_of(changed)
-            if (g.face, g.span) == (was.face, was.span) and g.start < was.end and g.end > was.start
-        ]  # fmt: skip
-        assert (not left) is holds
-
-
 def test_a_cracked_section_without_bars_has_no_deflection(existing: Existing) -> None:
     """Dead load on both spans: 19.8*6**2/16 = 44.55 kN.m at midspan, M_cr is 27.4 kN.m.
 

@@ -50,7 +50,9 @@ FROM = "from the axis of support 1"
 _LAYERS = (1, 2)
 _FARTHER = (0.0, 250.0, 500.0)
 """How much farther than a gap asks for bars are tried, where they may not end so near [mm]."""
-NO_FURTHER = f"no further bars there, up to {_MOST_BARS} of one size where the web takes them,"
+_UP_TO = f"(up to {_MOST_BARS} of one size there, where the web takes them)"
+NO_FURTHER = f"no further bars {_UP_TO}"
+_NOTHING_ELSE = "without another check failing"
 _NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
 
 
@@ -215,7 +217,7 @@ def _moved(trial: _Trial, ending: Runs, starting: Runs) -> Cure | None:
     for more in (cure.value + farther for farther in _FARTHER):
         if more <= room and trial.stands(longer(more)):
             return replace(cure, value=more, text=variable.text(more, all_beyond=False))
-    return Cure("longer", None, f"{variable.none}, or none without another check failing,")
+    return Cure("longer", None, f"none of the greater lengths tried of {which} {_NOTHING_ELSE}")
 
 
 def _grown(run: BarRun, before: float, after: float) -> BarRun:
@@ -264,7 +266,7 @@ def _of_size(trial: _Trial, size: str) -> Cure | None:
                 f"{FROM}{layer}"
             )
             return Cure("number", made.number, text, trial.use((*trial.runs, made)))
-    return Cure("number", None, f"{NO_FURTHER} or none without another check failing,")
+    return Cure("number", None, f"none of the further bars tried {_UP_TO} {_NOTHING_ELSE}")
 
 
 def _number_of(trial: _Trial, bar: BarRun) -> BarRun | None:
