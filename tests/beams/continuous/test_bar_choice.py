@@ -18,7 +18,8 @@ from hypothesis import strategies as st
 from lineproof import beams
 from lineproof.beams.bars import BarLayer, in_line
 from lineproof.beams.continuous import flexure, flexure_choice
-from lineproof.beams.continuous.bar_choice import TopBars
+from lineproof.beams.continuous.bar_choice import Chosen, TopBars
+from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.faces import faces_of, hogging, sagging_spans
 from lineproof.errors import UserError
 from lineproof.record.entry import CHECK
@@ -46,6 +47,16 @@ def _holds(beam: beams.ContinuousBeam, record: Any, *keys: str) -> bool:
     return all(bool(check) for check in checks)
 
 
+def _sections(model: Any, beam: beams.ContinuousBeam, **bars: dict[int, Any]) -> Design:
+    """Return a design of which the sections alone are known."""
+    made = {
+        face: {k: Chosen("", each, {}) for k, each in bars.get(face, {}).items()}
+        for face in ("bottom", "top")
+    }
+    unknown: Any = None
+    return Design(model, beam.pair, made["bottom"], made["top"], unknown, (), unknown)
+
+
 def _bottom_layouts(size: str) -> Iterator[tuple[BarLayer, ...]]:
     for n in range(2, MOST + 1):
         yield (BarLayer(n, size),)
@@ -66,7 +77,9 @@ def _best_bottom(beam: beams.ContinuousBeam) -> tuple[int, float, int] | None:
                  sum(x.number for x in layers))
                 for layers in _bottom_layouts(size)
                 if _holds(
-                    beam, lambda m, s=span, b=layers: flexure.record_sag(m, s, b, beam.pair),
+                    beam, lambda m, s=span, b=layers: flexure.record_sag(
+                        _sections(m, beam, bottom={s: b}), s
+                    ),
                     f"sag-{span}",
                 )
             ]  # fmt: skip
@@ -125,7 +138,9 @@ def _best_top(beam: beams.ContinuousBeam, support: int) -> dict[str, float]:
             top = TopBars(BarLayer(n, size), beside, 2)
             total = area * (n + 2 * beside)
             if total < found.get(size, float("inf")) and _holds(
-                beam, lambda m, t=top: flexure.record_hog(m, support, t, beam.pair), *keys
+                beam,
+                lambda m, t=top: flexure.record_hog(_sections(m, beam, top={support: t}), support),
+                *keys,
             ):
                 found[size] = total
     return found
@@ -158,7 +173,9 @@ def _tops_are_best(beam: beams.ContinuousBeam) -> None:
     for support, bars in tops.items():
         keys = [f.key for f in faces_of(model) if f.support == support and hogging(model, f) > 0]
         assert _holds(
-            beam, lambda m, j=support, t=bars: flexure.record_hog(m, j, t, beam.pair), *keys
+            beam,
+            lambda m, j=support, t=bars: flexure.record_hog(_sections(m, beam, top={j: t}), j),
+            *keys,
         )
     mass = sum(bars.area * beside[j] for j, bars in tops.items())
     assert mass <= min(totals, default=math.inf) * (1 + 1e-9)

@@ -13,7 +13,8 @@ from lineproof.beams.continuous.beam import DEFLECTIONS_CALL
 from lineproof.beams.continuous.cutoff_sets import Group
 from lineproof.beams.continuous.deflection import deflections
 from lineproof.beams.continuous.deflection_figure import bent_of, deflection_shapes_figure
-from lineproof.beams.continuous.deflection_top import _record_groups, through
+from lineproof.beams.continuous.deflection_hinges import stiffness_checks
+from lineproof.beams.continuous.developed import developed_at, record_groups
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import Standing
 from lineproof.beams.steps import Steps
@@ -110,18 +111,34 @@ def test_figure_and_cures_bend_what_is_recorded(spans: tuple[str, ...]) -> None:
     assert deflection_shapes_figure(design) is not None
 
 
-def test_nothing_runs_through(monkeypatch: pytest.MonkeyPatch) -> None:
-    """No deflection is printed, but a check that fails: the web cracks and nothing holds it."""
-    beam = start(spans=list(SHORT_MIDDLE))
-    run(beam, CALLS[:4])
-    monkeypatch.setattr(chapter, "record_top", lambda *_: None)
-    beam.deflections()
+def test_nothing_runs_through() -> None:
+    """No deflection is printed, but a check that fails: the web cracks and nothing holds it.
+
+    Given 5-25M end 0.50 m before midspan from either side. Dead load w on spans of 9, 4 and 9 m:
+    M_B*2*(9 + 4) + M_C*4 = -w*(9**3 + 4**3)/4, so M_B = M_C = -793/120*w. Where the bars end, 1.5 m
+    from the axis, M = -793/120*w + w*1.5*2.5/2, more than at midspan.
+    """
+    rows = [
+        {"face": face, "bars": "5-25M", "start": f"{start_at} m", "end": f"{end} m"}
+        for face, start_at, end in (
+            ("bottom", -0.15, 22.15), ("top", -0.15, 10.5), ("top", 11.5, 22.15),
+        )
+    ]  # fmt: skip
+    beam = start(spans=list(SHORT_MIDDLE), bar_runs=rows)
+    run(beam, CALLS[:6])
     made = beam.sheet.entries_of("deflection-2")
-    check = made["deflection-whole-top"]
-    assert not check
-    M_a, M_crdn = check.value
-    assert M_a > M_crdn > 0
-    assert [key for key in made if key.startswith("delta")] == []
+    w = beam.sheet.entry("loads/w_D2").value
+    M_crdn = 0.3 * math.sqrt(32) * 380 * 620**2 / 6
+    over, nothing = made["deflection-whole-top"].value
+    assert made["x_f"].value == 1500
+    assert made["M_a"].value == pytest.approx(w * 1e6 * (793 / 120 - 1.5 * 2.5 / 2), rel=1e-9)
+    assert (over, nothing) == (pytest.approx(made["M_a"].value - M_crdn, rel=1e-9), 0)
+    assert not made["deflection-whole-top"]
+    for k in (1, 3):  # continuous with it
+        (check,) = stiffness_checks(beam.sheet, k)
+        assert not check
+    parts = [part for part in beam.sheet.parts if part.key.startswith("deflection-")]
+    assert [key for part in parts for key in part.entries if key.startswith("delta")] == []
 
 
 def test_a_span_that_needs_no_calculation_records_no_bars() -> None:
@@ -138,14 +155,14 @@ def _standing(start: float, end: float, *laps: str, number: int = 2) -> Standing
 
 
 def test_bars_count_by_their_development_to_both_sides() -> None:
-    assert len(through([_standing(0, 1200)], 600.0)) == 1
-    (short,) = through([_standing(0, 1100)], 600.0)
+    assert len(developed_at([_standing(0, 1200)], "top", 600.0)) == 1
+    (short,) = developed_at([_standing(0, 1100)], "top", 600.0)
     assert (short.length, short.rise) == (500.0, 600.0)  # 1100 - 600 of 600 mm
-    assert through([_standing(700, 5000)], 600.0) == ()
-    assert all(met.whole for met in through([_standing(0, 1200)], 600.0))
+    assert developed_at([_standing(700, 5000)], "top", 600.0) == ()
+    assert all(met.whole for met in developed_at([_standing(0, 1200)], "top", 600.0))
     lap = [_standing(-4000, 1000, "end"), _standing(400, 5000, "start")]
     for x in (420.0, 699.0, 700.0, 701.0, 980.0):
-        assert sum(met.run.number for met in through(lap, x)) == 2
+        assert sum(met.run.number for met in developed_at(lap, "top", x)) == 2
 
 
 def test_bars_of_several_sizes_and_layers() -> None:
@@ -157,7 +174,7 @@ def test_bars_of_several_sizes_and_layers() -> None:
         steps = Steps(sheet, {"h": sheet.entry("given/h"), "c_c": sheet.find("c_c")})
         steps.bind(d_bs=sheet.entries_of("sag-1")["d_bs"])
         groups = Group(1, "20M", 3, "20M"), Group(1, "25M", 2, "25M"), Group(2, "20M", 2, "25M")
-        _record_groups(steps, [(group, None) for group in groups])
+        record_groups(steps, [(group, None) for group in groups], "midspan")
     made = sheet.entries_of("deflection-1-top")
     above = 620 - 30 - 11.3
     second = above - 25.2 - max(1.4 * 25.2, 1.4 * 20, 30) - 19.5 / 2

@@ -177,19 +177,6 @@ def test_where_no_rise_governs_it_is_said() -> None:
     assert "deflection-2/deflection-rise" not in made.entries
 
 
-def test_hogging_midspan_without_top_bars_fails_without_a_deflection() -> None:
-    section, service = section_of(CORRIDOR, 2), service_moments(CORRIDOR, UNIFORM, 2)
-    sheet = start_sheet()
-    entries = given_span(sheet, section, 2)
-
-    made = record_span(sheet, entries, service, carries=PARTITIONS)
-    M_a, M_crdn = made.check.value
-    assert not made.check
-    assert M_a == pytest.approx(-service.stages["dead"].M_m, rel=EXACT)
-    assert M_a > M_crdn
-    assert not [key for key in sheet.entries_of("deflection-2") if key.startswith("delta")]
-
-
 def test_fixed_root() -> None:
     beam = beam_of([2500], ["fixed", "free"])
     found, made = recorded(beam, 1, alone(UNIFORM, beam), {}, PARTITIONS)

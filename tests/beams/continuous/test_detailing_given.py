@@ -9,6 +9,7 @@ from typing import Any
 import pytest
 
 from lineproof.beams.bars import BarLayer
+from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.detailing import lay_bars
 from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
 from lineproof.beams.continuous.detailing_given import beside_gap, read_given_runs, section_bars_of
@@ -93,27 +94,30 @@ def test_a_section_that_needs_more_bars_than_stand_there() -> None:
 def test_sections_are_read_from_the_runs() -> None:
     designed = three_spans()
     runs = lay_bars(designed)
-    assert section_bars_of(runs, designed.outline, "15M") == designed.bars
+    places = [sag_at(designed, span) for span in (1, 2, 3)]
+    assert section_bars_of(runs, designed.outline, "15M", places) == designed.bars
 
 
 def test_two_sizes_in_one_layer_are_refused() -> None:
     runs = read_given_runs([GOOD, row(bars="2-20M")], BASIS, PAIR)
     with pytest.raises(UserError, match="20M and 25M stand in layer 1 of the bottom bars"):
-        section_bars_of(runs, BASIS.outline, "15M")
+        section_bars_of(runs, BASIS.outline, "15M", [3500.0])
 
 
-def test_where_no_bars_stand_at_midspan_the_nearest_are_known() -> None:
-    """2-25M end at 3 m and 2-20M begin at 4.2 m, the middle is at 3.5 m: the 25M are nearer.
+def test_where_no_bars_stand_the_nearest_are_known() -> None:
+    """2-25M end at 3 m and 2-20M begin at 4.2 m: of 3.5 m the 25M are nearer, of 3.9 m the 20M.
 
     Also where the 20M are short, so that the middle of the 25M is further away.
     """
     short = row(bars="2-20M", start="4.2 m", end="5 m")
     runs = read_given_runs([row(end="3 m"), short], BASIS, PAIR)
-    assert beside_gap(runs, BASIS.outline, 1) == (BarLayer(2, "25M"),)
+    assert beside_gap(runs, BASIS.outline, 1, 3500.0) == (BarLayer(2, "25M"),)
     runs = read_given_runs([row(end="3 m"), row(bars="2-20M", start="4.2 m")], BASIS, PAIR)
-    assert section_bars_of(runs, BASIS.outline, "15M").bottom == ((),)
-    assert beside_gap(runs, BASIS.outline, 1) == (BarLayer(2, "25M"),)
-    assert beside_gap((), BASIS.outline, 1) == ()
+    assert section_bars_of(runs, BASIS.outline, "15M", [3500.0]).bottom == ((),)
+    assert section_bars_of(runs, BASIS.outline, "15M", [2900.0]).bottom == ((BarLayer(2, "25M"),),)
+    assert beside_gap(runs, BASIS.outline, 1, 3500.0) == (BarLayer(2, "25M"),)
+    assert beside_gap(runs, BASIS.outline, 1, 3900.0) == (BarLayer(2, "20M"),)
+    assert beside_gap((), BASIS.outline, 1, 3500.0) == ()
 
 
 def spoiled(change: Callable[[BarRun], BarRun]) -> bool:

@@ -28,7 +28,6 @@ from lineproof.beams.continuous.deflections import (
 )
 from lineproof.beams.continuous.deliverables import SCHEDULE, record_schedule
 from lineproof.beams.continuous.design import Design, design_of, layers_of, top_of
-from lineproof.beams.continuous.flexure_gaps import record_hog_without, record_sag_gap
 from lineproof.beams.continuous.geometry import record_spans
 from lineproof.beams.continuous.imported_record import not_covered, record_imported_analysis
 from lineproof.beams.continuous.inputs import ContinuousInputs, read_inputs
@@ -152,23 +151,10 @@ class ContinuousBeam:
         with self.sheet.chapter(FLEXURE_CALL, closing=self._cure):
             record_cover(self.sheet, self.inputs, sizes or [run.size for run in design.runs])
             for span in faces.sagging_spans(design.model):
-                self._sag(design, span)
+                flexure.record_sag(design, span)
             for support, typed in enumerate(self.inputs.supports, start=1):
                 if typed.kind != "free":
-                    self._hog(design, support)
-
-    def _sag(self, design: Design, span: int) -> None:
-        if span in design.bottom:
-            layers = layers_of(design.bottom[span])
-            flexure.record_sag(design.model, span, layers, self.pair)
-            return
-        record_sag_gap(design.model, span, design.beside[span], design.designed.bars.holders)
-
-    def _hog(self, design: Design, support: int) -> None:
-        if support in design.top:
-            flexure.record_hog(design.model, support, top_of(design.top[support]), self.pair)
-        else:
-            record_hog_without(design.model, support, design.designed.bars.holders)
+                    flexure.record_hog(design, support)
 
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""

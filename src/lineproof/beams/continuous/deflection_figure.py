@@ -11,6 +11,7 @@ from lineproof.beams.continuous.deflection import (
     SpanSection,
     deflections,
 )
+from lineproof.beams.continuous.deflection_hinges import stiffness_checks
 from lineproof.beams.continuous.deflection_service import (
     Stage,
     StageMoments,
@@ -18,8 +19,8 @@ from lineproof.beams.continuous.deflection_service import (
     span_behind,
 )
 from lineproof.beams.continuous.deflection_shapes import deflected_shapes
-from lineproof.beams.continuous.deflection_top import top_recorded
-from lineproof.beams.continuous.deflections import bars_in, history_of, service_of, top_at
+from lineproof.beams.continuous.deflection_top import bottom_recorded, top_recorded
+from lineproof.beams.continuous.deflections import history_of, service_of, top_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.figure_deflection import (
     DeflectionCurve,
@@ -38,7 +39,8 @@ _NAMES = ("immediate, dead and live load", "after attachment", "total, long term
 def deflection_shapes_figure(design: Design) -> Figure | None:
     """Return the figure, or None where deflections are not calculated for every span."""
     model = design.model
-    if model.inputs.forces_file is not None:
+    spans = range(1, model.spans + 1)
+    if model.inputs.forces_file is not None or any(stiffness_checks(model.sheet, k) for k in spans):
         return None
     pieces: dict[str, list[DeflectionPiece]] = {name: [] for name in _NAMES}
     behind: dict[int, Behind] = {}
@@ -96,8 +98,7 @@ def _section(model: Model, span: int, behind: Mapping[int, Behind]) -> SpanSecti
     b_w = find("b_w").value
     midspan = None
     if not free:
-        bars = bars_in(sheet.entries_of(f"sag-{span}"))
-        midspan = _place(place.get("b_f", b_w), bars)
+        midspan = _place(place.get("b_f", b_w), bottom_recorded(model, span))
     before = span_behind(model.forces.beam, span) if free else None
     return SpanSection(
         place["l"], place["l_n"], place["h"], b_w,

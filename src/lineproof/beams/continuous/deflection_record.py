@@ -23,13 +23,12 @@ from lineproof.beams.continuous.deflection_limits import record_limits
 from lineproof.beams.continuous.deflection_local import LocalLoad, Sums, record_local
 from lineproof.beams.continuous.deflection_service import STAGES, FreeEnd, Stage
 from lineproof.beams.steps import Steps, only
-from lineproof.formula import Criterion, Formula
+from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 from lineproof.standards.a23_3 import flange
-from lineproof.standards.references import MECHANICS
 
 Moments = Callable[[Steps, Stage], None]
 """Records, inside the open part of a stage, what its moments rest on, and binds them in ``place``.
@@ -40,10 +39,6 @@ behind; hogging moments positive. ``M_aem``, ``M_ae1``, ``M_ae2`` (root: ``M_ae1
 are the largest moments reached before, a construction stage included.
 """
 Bound = Mapping[str, Entry]
-_NO_STIFFNESS = (
-    "Under this moment the concrete cracks where no bars count: nothing bends there but a hinge. "
-    "No deflection is given, and the span does NOT hold; bars that cross the crack are needed."
-)
 WORDS: Mapping[Stage, str] = {
     "dead": "dead load",
     "sustained": "dead load and sustained live load",
@@ -58,13 +53,18 @@ SYMBOLS: Mapping[Stage, str] = {
 }
 
 
+def span_name(number: int, free: FreeEnd) -> str:
+    """Return what a span is called in titles."""
+    return f"cantilever (span {number})" if free else f"span {number}"
+
+
 @dataclass(frozen=True)
 class SpanEntries:
     """One span as recorded: ``span`` binds l, l_n, h, I_g, y_b.
 
     ``midspan`` binds b, d, A_s; ``left`` and ``right`` bind d, A_s at continuous ends and are
-    None elsewhere; a section without bars binds no A_s. Each may bind A_sp and d_p, which are
-    counted then. Sections at supports are the
+    None elsewhere; a section without bars binds no A_s and must not crack (``deflection_hinges``).
+    Each may bind A_sp and d_p, which are counted then. Sections at supports are the
     web, top in tension. ``behind`` is the number of the span behind a cantilever, whose deflections
     must be recorded before; None where the root is fixed. ``l_behind`` is its length. ``top`` binds
     d and A_s of the top bars that run through midspan, for spans that hog there.
@@ -90,7 +90,7 @@ class SpanEntries:
     @property
     def name(self) -> str:
         """What the span is called in titles."""
-        return f"cantilever (span {self.number})" if self.free else f"span {self.number}"
+        return span_name(self.number, self.free)
 
     @property
     def ends(self) -> dict[str, Bound]:
@@ -109,14 +109,6 @@ class RecordedDeflection:
     check: Entry
     rise: Entry | None = None
     entries: Mapping[str, Entry] = field(default_factory=dict)
-
-
-class NoStiffnessError(Exception):
-    """A section in which no bars count cracks: ``test`` fails with the moment and its limit."""
-
-    def __init__(self, test: Criterion, M_a: Entry, limit: Entry) -> None:
-        super().__init__(test.key)
-        self.test, self.M_a, self.limit = test, M_a, limit
 
 
 def record_deflection(
@@ -148,15 +140,9 @@ def record_deflection(
         sums = record_local(steps, span.local, cantilever=span.free)
         behind = _record_behind(steps, span)
     for stage in (*STAGES, *(("rise",) if lifting else ())):
-        broken = None
         with sheet.part(f"{key}-{stage}", f"Deflection of {span.name}: {WORDS[stage]}"):
             own = Steps(sheet, steps.place)
-            try:
-                _record_stage(own, span, moments, stage, (sums, behind))
-            except NoStiffnessError as found:
-                broken = found
-        if broken is not None:
-            return _record_broken(sheet, span, broken)
+            _record_stage(own, span, moments, stage, (sums, behind))
         steps.bind(**{SYMBOLS[stage]: own.entry(SYMBOLS[stage])})
         if stage == "all":
             steps.bind(**only(own.place, ("M_m", "M_h1", "M_h2", "M_h")))
@@ -168,14 +154,6 @@ def record_deflection(
             local=span.local, ends=tuple(span.ends),
         )  # fmt: skip
     return RecordedDeflection(check, rise, sheet.entries_of(key))
-
-
-def _record_broken(sheet: Sheet, span: SpanEntries, found: NoStiffnessError) -> RecordedDeflection:
-    """Record, in place of the limits, the check that fails for want of stiffness."""
-    with sheet.part(f"deflection-{span.number}", f"Deflection of {span.name}: no stiffness"):
-        sheet.note("no-stiffness", _NO_STIFFNESS, title="Deflection", basis=MECHANICS)
-        args: dict[str, Any] = dict(zip(found.test.names, (found.M_a, found.limit), strict=True))
-        return RecordedDeflection(sheet.check(found.test, **args))
 
 
 def is_calculated(sheet: Sheet, span: SpanEntries, carries: str) -> bool:
@@ -261,8 +239,6 @@ def _record_behind(steps: Steps, span: SpanEntries) -> Sums:
 def _record_stage(
     steps: Steps, span: SpanEntries, moments: Moments, stage: Stage, sums: tuple[Sums, Sums]
 ) -> None:
-    if span.behind is not None:
-        _need_stiffness(steps.sheet, span.behind)
     moments(steps, stage)
     if span.free:
         _record_tip(steps, span, stage, sums)
@@ -285,13 +261,6 @@ def _record_stage(
         named(steps, stages.ONE_END_SPAN, delta, title, M_m=M_m, M_h=M_h, l=l)
     else:
         named(steps, stages.SIMPLE_SPAN, delta, title, M_m=M_m, I_e=I_em, l=l)
-
-
-def _need_stiffness(sheet: Sheet, behind: int) -> None:
-    """Raise what stopped the deflection of the span behind a cantilever, if anything did."""
-    for entry in sheet.entries_of(f"deflection-{behind}").values():
-        if entry.source in (stages.WHOLE, stages.WHOLE_TOP):
-            raise NoStiffnessError(entry.source, *entry.args)
 
 
 def _at_midspan(steps: Steps) -> Entry:
@@ -335,10 +304,7 @@ def _with_local(steps: Steps, symbol: str, sums: Sums, stage: Stage) -> Entry:
 def _inertia(
     steps: Steps, end: str, symbol: str, where: str, I_g: Entry | None = None, gives: str = ""
 ) -> Entry:
-    """Record the largest moment so far and the effective inertia of a place.
-
-    Raises :class:`NoStiffnessError` where it cracks and no bars count.
-    """
+    """Record the largest moment so far and the effective inertia of a place."""
     M_a, before = steps.entry(symbol), steps.place.get(f"M_ae{end}")
     if before is not None:
         title = f"{stages.LARGEST_SO_FAR.title}, {where}"
@@ -352,8 +318,6 @@ def _inertia(
         args: dict[str, Any] = {n: bound[n] for n in test.names}
         steps.sheet.decide(test, key=f"{test.key}-{end}", title=f"{test.title}, {where}", **args)
         formula = stages.GROSS
-    elif f"I_cr{end}" not in steps.place:
-        raise NoStiffnessError(stages.WHOLE_TOP if top else stages.WHOLE, M_a, limit)
     else:
         formula = clause.EFFECTIVE_TOP if top else clause.EFFECTIVE
         bound["I_cr"] = steps.entry(f"I_cr{end}")

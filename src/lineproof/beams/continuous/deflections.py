@@ -6,12 +6,20 @@ from collections.abc import Mapping
 from dataclasses import replace
 
 from lineproof.beams.continuous.deflection import History
+from lineproof.beams.continuous.deflection_hinges import (
+    Hinge,
+    continuous_with,
+    hinge_of,
+    record_beside,
+    record_hinge,
+)
 from lineproof.beams.continuous.deflection_local import LocalLoad
 from lineproof.beams.continuous.deflection_record import (
     RecordedDeflection,
     SpanEntries,
     is_calculated,
     record_deflection,
+    span_name,
 )
 from lineproof.beams.continuous.deflection_service import (
     SHARES,
@@ -21,8 +29,14 @@ from lineproof.beams.continuous.deflection_service import (
     span_behind,
     sustained_share,
 )
-from lineproof.beams.continuous.deflection_top import hogging_cracks, record_top
+from lineproof.beams.continuous.deflection_top import (
+    bottom_recorded,
+    hogging_cracks,
+    record_bottom,
+    record_top,
+)
 from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.model import GIVEN, Model, SingleLoad
 from lineproof.beams.continuous.service import record_construction, service_lines
@@ -54,32 +68,59 @@ def record_not_covered(sheet: Sheet) -> None:
 def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
     """Record the deflections of every span; a cantilever after the span behind it.
 
-    Where hogging cracks a midspan, the top bars that run through it are recorded before.
+    Where hogging cracks a midspan, the top bars that run through it are recorded before. A span
+    that cracks where no bars stand, and those continuous with it, are given no deflection.
     """
     model = design.model
     r_Ls = _record_share(model)
+    services = {span: service_of(model, span) for span in range(1, model.spans + 1)}
+    found = {span: hinge_of(design, service) for span, service in services.items()}
+    hinges = {span: hinge for span, hinge in found.items() if hinge is not None}
+    beside = continuous_with(model, tuple(hinges))
+    made = {span: _record_hinge(design, hinge) for span, hinge in hinges.items()}
+    for span, hinge in sorted(beside.items()):
+        made[span] = record_beside(model.sheet, span, name_of(model, span), hinge)
     order = sorted(range(1, model.spans + 1), key=lambda k: (model.forces.beam.cantilever(k), k))
-    made = {}
     wanted = {span_behind(model.forces.beam, k) for k in order if model.forces.beam.cantilever(k)}
     for span in order:
-        service = service_of(model, span)
-        entries = _entries_of(model, span, r_Ls)
-        asked = span in wanted or is_calculated(model.sheet, entries, model.inputs.carries)
-        earlier = _earlier(model, span)
-        before = earlier["M_aem"].value if "M_aem" in earlier else 0.0
-        if asked and not entries.free and hogging_cracks(model, span, service.stages, before):
-            entries = replace(entries, top=record_top(design, span))
-        made[span] = record_deflection(
-            model.sheet,
-            entries,
-            service_lines(model, service, entries.behind, earlier),
-            carries=model.inputs.carries,
-            history=history_of(model),
-            lifting=service.lifting,
-            arrangement=service.arrangement,
-            calculate=asked,
-        )
+        if span not in made:
+            made[span] = _record_span(design, services[span], r_Ls, asked=span in wanted)
     return made
+
+
+def name_of(model: Model, span: int) -> str:
+    """Return what a span is called in titles."""
+    return span_name(span, free_end(model.forces.beam, span))
+
+
+def _record_hinge(design: Design, hinge: Hinge) -> RecordedDeflection:
+    earlier = _earlier(design.model, hinge.span) if hinge.building else {}
+    return record_hinge(design, hinge, earlier, name_of(design.model, hinge.span))
+
+
+def _record_span(
+    design: Design, service: ServiceMoments, r_Ls: Entry, *, asked: bool
+) -> RecordedDeflection:
+    model, span = design.model, service.span
+    free = free_end(model.forces.beam, span)
+    if not free:
+        record_bottom(design, span)
+    entries = _entries_of(model, span, r_Ls)
+    asked = asked or is_calculated(model.sheet, entries, model.inputs.carries)
+    earlier = _earlier(model, span)
+    before = earlier["M_aem"].value if "M_aem" in earlier else 0.0
+    if asked and not free and hogging_cracks(model, span, service.stages, before):
+        entries = replace(entries, top=record_top(design, span))
+    return record_deflection(
+        model.sheet,
+        entries,
+        service_lines(model, service, entries.behind, earlier),
+        carries=model.inputs.carries,
+        history=history_of(model),
+        lifting=service.lifting,
+        arrangement=service.arrangement,
+        calculate=asked,
+    )
 
 
 def _earlier(model: Model, span: int) -> dict[str, Entry]:
@@ -132,7 +173,7 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
     midspan = None
     if not free:
         b = place.get("b_f", sheet.entry(f"{GIVEN}/b_w"))
-        midspan = {"b": b, **bars_in(sheet.entries_of(f"sag-{span}"))}
+        midspan = {"b": b, **bottom_recorded(model, span)}
     return SpanEntries(
         span,
         {name: place[name] for name in _SPAN},
@@ -159,15 +200,8 @@ def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
     for each in (side, "left", "right"):
         found = [p for p in model.sheet.parts if p.key == f"hog-{support}-{each}"]
         if found and "A_s" in found[0].entries:
-            return bars_in(found[0].entries)
+            return bars_of(model.sheet, found[0].key)
     return None
-
-
-def bars_in(section: Mapping[str, Entry]) -> dict[str, Entry]:
-    """Return d and A_s of a recorded section; empty where no bars stand."""
-    if section["A_s"].value <= 0:
-        return {}
-    return {name: section[name] for name in ("d", "A_s")}
 
 
 def _local(load: SingleLoad, r_Ls: Entry) -> LocalLoad:

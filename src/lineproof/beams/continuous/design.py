@@ -9,12 +9,14 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
+from functools import cached_property
 from itertools import count
 from typing import Any
 
 from lineproof.beams.bars import BarLayer, BarLayers, bars_text
 from lineproof.beams.continuous import faces, flexure_choice
 from lineproof.beams.continuous.bar_choice import Bars, Chosen, TopBars
+from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design_torsion import (
     HOLDERS,
     Asked,
@@ -36,11 +38,14 @@ from lineproof.beams.continuous.detailing_given import (
     beside_gap,
     read_given_runs,
     section_bars_of,
+    top_bars_at,
 )
+from lineproof.beams.continuous.developed import Developed, developed_at
+from lineproof.beams.continuous.faces import Face
 from lineproof.beams.continuous.flexure_choice import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
-from lineproof.beams.continuous.resistance import stand
+from lineproof.beams.continuous.resistance import Standing, stand
 from lineproof.beams.continuous.shear_stretches import basis_of, span_numbers, stretches_of
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.errors import UserError
@@ -65,7 +70,7 @@ class Design:
     runs: tuple[BarRun, ...]
     stirrups: Choice
     beside: Mapping[int, BarLayers] = field(default_factory=dict)
-    """Of spans whose middle no given bars cross: the nearest of their bottom bars."""
+    """Of spans whose largest moment no given bars cross: the nearest of their bottom bars."""
     raised: tuple[str, ...] = ()
     """Bars that torsion, or shear at a girder, asks for beyond what the moments do, in words."""
 
@@ -79,6 +84,38 @@ class Design:
         """Bars and stirrups, the ties around hooks included."""
         ties = hook_ties(self.designed, self.runs)
         return Detailing(self.runs, (*self.stirrups.zones, *ties))
+
+    @property
+    def given(self) -> bool:
+        """Whether the bars along the beam are given."""
+        return self.model.inputs.bar_runs is not None
+
+    def bottom_bars(self, span: int) -> BarLayers:
+        """Return the bottom bars where the moment of a span is largest; () where none stand."""
+        return layers_of(self.bottom[span]) if span in self.bottom else ()
+
+    def top_bars(self, face: Face) -> TopBars | None:
+        """Return the top bars of a face: those of its support, given ones as they stand there."""
+        if self.given:
+            there = top_bars_at(self.runs, self._place(face), face.name)
+            return _as_chosen(there, self.model)
+        return top_of(self.top[face.support]) if face.support in self.top else None
+
+    def bottom_counted(self, span: int) -> tuple[Developed, ...]:
+        """Return the bottom bars that count where the moment of a span is largest."""
+        return developed_at(self._standing, "bottom", sag_at(self.designed, span))
+
+    def top_counted(self, face: Face) -> tuple[Developed, ...]:
+        """Return the top bars that count at the face of a support."""
+        return developed_at(self._standing, "top", self._place(face))
+
+    @cached_property
+    def _standing(self) -> tuple[Standing, ...]:
+        return stand(self.designed, self.runs)
+
+    def _place(self, face: Face) -> float:
+        """Return where a face stands along the beam."""
+        return self.outline.faces(face.span)[0 if face.near == "left" else 1]
 
 
 def design_of(model: Model, pair: CodePair) -> Design:
@@ -133,7 +170,7 @@ def _designed(
     )
     flexure_choice.refuse_unfit(bottom, "bottom_bars")
     flexure_choice.refuse_unfit(top, "top_bars")
-    beside = _beside(bare, bottom, runs)
+    beside = _beside(bare, bottom, runs, _sag_places(model, bare.outline))
     bars = _section_bars(model, bottom, top, asked.holders, beside)
     designed = replace(bare, bars=bars)
     if before is not None:
@@ -256,24 +293,37 @@ def _given_sections(
     """Return the bars of the sections that are given, as such or as runs along the beam."""
     if runs is None:
         return flexure_choice.given_bottom(model), flexure_choice.given_top_bars(model, pair)
-    found = section_bars_of(runs, outline, HOLDERS)
-    sides = SIDES[model.inputs.shape]
+    found = section_bars_of(runs, outline, HOLDERS, _sag_places(model, outline))
     bottom = {span: layers for span, layers in enumerate(found.bottom, start=1) if layers}
-    top = {
-        support: TopBars(each.web[0], each.overhang // sides if sides else 0, sides)
-        for support, each in enumerate(found.top, start=1)
-        if each.web
-    }
-    return bottom, top
+    top = {support: _as_chosen(each, model) for support, each in enumerate(found.top, start=1)}
+    return bottom, {support: each for support, each in top.items() if each is not None}
+
+
+def _sag_places(model: Model, outline: BeamOutline) -> list[float]:
+    """Return where the bottom bars of every span are counted: of a cantilever at its middle."""
+    middles = [sum(outline.faces(span)) / 2 for span in range(1, model.spans + 1)]
+    places = {k: outline.axes[k - 1] + model.forces.sag(k).x for k in faces.sagging_spans(model)}
+    return [places.get(span, middle) for span, middle in enumerate(middles, start=1)]
+
+
+def _as_chosen(top: LaidTop, model: Model) -> TopBars | None:
+    """Return top bars that stand at a place as those of a section; None without any in the web."""
+    sides = SIDES[model.inputs.shape]
+    if not top.web:
+        return None
+    return TopBars(top.web[0], top.overhang // sides if sides else 0, sides)
 
 
 def _beside(
-    bare: Designed, bottom: Mapping[int, Chosen], runs: tuple[BarRun, ...] | None
+    bare: Designed,
+    bottom: Mapping[int, Chosen],
+    runs: tuple[BarRun, ...] | None,
+    places: Sequence[float],
 ) -> dict[int, BarLayers]:
-    """Return the nearest bottom bars of the spans whose middle no given bars cross."""
+    """Return the nearest bottom bars of the spans whose largest moment no given bars cross."""
     spans = range(1, len(bare.outline.lengths) + 1) if runs is not None else ()
     empty = [k for k in spans if k not in bottom and not bare.cantilever(k)]
-    return {k: beside_gap(runs or (), bare.outline, k) for k in empty}
+    return {k: beside_gap(runs or (), bare.outline, k, places[k - 1]) for k in empty}
 
 
 def _section_bars(

@@ -223,35 +223,46 @@ def _check_section(
             )
 
 
-def section_bars_of(runs: Iterable[BarRun], outline: BeamOutline, holders: str) -> SectionBars:
+def section_bars_of(
+    runs: Iterable[BarRun], outline: BeamOutline, holders: str, bottom_at: Sequence[float]
+) -> SectionBars:
     """Return the bars of every section as they stand in given runs.
 
-    No layers where none stand: of a span at its middle. Raises :class:`UserError` for layers of
-    two sizes.
+    ``bottom_at`` are the places of the sections of the spans along the beam [mm]. No layers where
+    none stand. Raises :class:`UserError` for layers of two sizes.
     """
     kept, faults = tuple(runs), FaultList()
-    bottom = []
-    for span in range(1, len(outline.lengths) + 1):
-        middle = sum(outline.faces(span)) / 2
-        bottom.append(_web_at(kept, "bottom", middle, f"span {span}", faults))
+    bottom = [
+        _web_at(kept, "bottom", x, f"span {span}", faults)
+        for span, x in enumerate(bottom_at, start=1)
+    ]
     top = []
     for support, built in enumerate(outline.supports, start=1):
-        x = top_section(outline, support)
-        overhang = sum(r.number for r in at_section(kept, "top", x) if r.place == "overhang")
-        free = built.kind == "free"
-        web = () if free else _web_at(kept, "top", x, f"support {support}", faults)
-        top.append(TopBars(web, 0 if free else overhang))
+        x, name = top_section(outline, support), f"support {support}"
+        top.append(TopBars() if built.kind == "free" else _top_at(kept, x, name, faults))
     faults.raise_if_any()
     return SectionBars(tuple(bottom), tuple(top), holders)
 
 
-def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int) -> BarLayers:
-    """Return the bottom bars of a span nearest to its middle, where none stand; () for none."""
+def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
+    """Return the top bars that stand at a place; raises :class:`UserError` as above."""
+    faults = FaultList()
+    made = _top_at(tuple(runs), x, name, faults)
+    faults.raise_if_any()
+    return made
+
+
+def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) -> TopBars:
+    overhang = sum(r.number for r in at_section(runs, "top", x) if r.place == "overhang")
+    return TopBars(_web_at(runs, "top", x, name, faults), overhang)
+
+
+def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int, at: float) -> BarLayers:
+    """Return the bottom bars of a span nearest to a place where none stand; () for none."""
     kept = tuple(runs)
     start, end = outline.faces(span)
-    middle = (start + end) / 2
     stretches = [(a, b) for a, b in _stretches(kept, outline) if b > start and a < end]
-    for a, b in sorted(stretches, key=lambda each: max(each[0] - middle, middle - each[1])):
+    for a, b in sorted(stretches, key=lambda each: max(each[0] - at, at - each[1])):
         layers = _web_at(kept, "bottom", (a + b) / 2, f"span {span}", FaultList())
         if layers:
             return layers

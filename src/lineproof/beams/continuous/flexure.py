@@ -2,19 +2,31 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 
-from lineproof.beams.bars import BarLayers
 from lineproof.beams.bottom_bars import bars_inside, for_distance
 from lineproof.beams.continuous.bar_choice import (
     TopBars,
 )
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
+from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.developed import (
+    Developed,
+    area_of,
+    developed_key,
+    record_developed_bars,
+    same,
+)
 from lineproof.beams.continuous.faces import (
     Face,
     faces_of,
     hogging,
     nominally_simple,
+)
+from lineproof.beams.continuous.flexure_gaps import (
+    record_depth_assumed,
+    record_depth_beside,
+    record_without,
 )
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
@@ -34,11 +46,11 @@ from lineproof.beams.section import zone_of
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import analysis, bars, flexure, minimum
-from lineproof.standards.codes import CodePair
 
 _LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
 _SHARED = ("M_r", "A_s", "d", "n_o", "A_b", "d_b", "d_bs")
 """What both faces of a support share where their section is the same."""
+_SAME = 1e-9
 CHOSEN = "chosen: one size for the beam, few second layers, then least mass"
 
 
@@ -49,29 +61,76 @@ def _origin(inputs: ContinuousInputs, bars: object) -> str:
     return "given" if bars is not None else CHOSEN
 
 
-def record_sag(model: Model, span: int, layers: BarLayers, pair: CodePair) -> None:
-    """Record a span's largest moment, its bottom bars, their resistance and all checks."""
+def record_sag(design: Design, span: int) -> None:
+    """Record a span's largest moment, its bottom bars, their resistance and all checks.
+
+    Given bars are counted as far as they are developed where that moment stands; where none stand
+    there is no resistance.
+    """
+    model, layers = design.model, design.bottom_bars(span)
     sheet, inputs = model.sheet, model.inputs
-    demand = model.forces.sag(span)
-    origin = _origin(inputs, inputs.bottom_bars[span - 1])
-    with sheet.part(f"sag-{span}", f"Span {span}: moment in the span"):
+    demand, key = model.forces.sag(span), f"sag-{span}"
+    if layers:
+        counts = _bottom_in_part(design, key, span)
+    else:
+        with sheet.part(f"{key}-beside", f"Span {span}: depth to the bottom bars beside the gap"):
+            sheet.stand_for(begin(model, span, "b_w").place)
+            holder = design.designed.bars.holders
+            counts = {"d": record_depth_beside(sheet, inputs.stirrup, design.beside[span], holder)}
+    with sheet.part(key, f"Span {span}: moment in the span"):
         steps = begin(model, span, "b_f" if inputs.slab else "b_w")
         near = nearer(model, demand)
         record_forces(steps, model, demand, near, x=at_face(model, demand, near))
+        if not layers:
+            steps.bind(**counts)
+            record_without(steps, inputs.shape, "bottom")
+            return
+        origin = _origin(inputs, inputs.bottom_bars[span - 1])
         bars_inside(sheet, layers, stirrup=inputs.stirrup, origin=origin)
         _take(steps, _LAYERS)
+        steps.bind(**counts)
         required(steps, inputs.shape)
         steps.check(flexure.ENOUGH_STEEL)
         M_r = resistance(steps, inputs.shape)
-        record_yield(steps, pair)
+        record_yield(steps, design.pair)
         steps.check(flexure.STRENGTH)
-        case = "two layers" if len(layers) > 1 else "one layer"
+        case = "two layers" if len(layers) > 1 and not counts else "one layer"
         record_proof(steps, (zone_of(inputs.shape), case), M_r)
         minimum_of(
             steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
         )
         cracks_inside(steps, inputs.exposure, layers)
         skin_inside(steps, inputs.exposure)
+
+
+def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
+    """Record given bottom bars where they count in part; return their d and A_s, else nothing."""
+    if not design.given:
+        return {}
+    counted = design.bottom_counted(span)
+    area = sum(layer.area for layer in design.bottom_bars(span))
+    return _in_part(design, counted, area, (key, f"Span {span}: bottom bars", span))
+
+
+def _top_in_part(design: Design, face: Face, top: TopBars) -> dict[str, Entry]:
+    """Record given top bars where they count in part; return their d and A_s, else nothing."""
+    if not design.given:
+        return {}
+    title = f"{face.name.capitalize()}: top bars"
+    return _in_part(design, design.top_counted(face), top.area, (face.key, title, face.span))
+
+
+def _in_part(
+    design: Design, counted: Sequence[Developed], area: float, section: tuple[str, str, int]
+) -> dict[str, Entry]:
+    """Record bars that count otherwise than in full; ``section`` has key, title and span."""
+    key, title, span = section
+    if abs(area_of(counted) - area) <= _SAME * area:
+        return {}
+    return record_developed_bars(
+        design.model, design.designed, counted, key=developed_key(key),
+        title=f"{title} as far as developed", span=span,
+    )  # fmt: skip
 
 
 def begin(model: Model, span: int, width: str) -> Steps:
@@ -110,27 +169,40 @@ def at_face(model: Model, demand: Demand, near: End) -> Entry | None:
     return model.sheet.line(analysis.TO_FACE, b_sn=model.sheet.entry(f"{GIVEN}/b_s{support}"))
 
 
-def record_hog(model: Model, support: int, top: TopBars, pair: CodePair) -> None:
+def record_hog(design: Design, support: int) -> None:
     """Record both faces of a support: moments, top bars, resistance and all checks.
 
-    The second face of one depth has the same section: there the resistance is taken over.
+    The second face of one depth has the same section: there the resistance is taken over. Given
+    bars are counted at each face as far as they are developed there.
     """
-    faces = [face for face in faces_of(model) if face.support == support]
-    faces.sort(key=lambda face: -hogging(model, face))
+    model = design.model
+    rows = [face for face in faces_of(model) if face.support == support]
+    rows.sort(key=lambda face: -hogging(model, face))
     worst: dict[str, Entry] = {}
-    for face in faces:
-        with model.sheet.part(face.key, f"{face.name.capitalize()}: moment over the support"):
-            if hogging(model, face) <= 0:
+    for face in rows:
+        title = f"{face.name.capitalize()}: moment over the support"
+        if hogging(model, face) <= 0:
+            with model.sheet.part(face.key, title):
                 record_no_moment(model, face)
-            elif worst and _same_section(model, faces[0], face):
+            continue
+        top = design.top_bars(face)
+        if top is None:
+            with model.sheet.part(face.key, title):
+                _record_face_without(design, face)
+        elif worst and _same_section(design, rows[0], face):
+            with model.sheet.part(face.key, title):
                 _record_other_face(model, face, worst, top)
-            else:
-                worst = _record_face(model, face, top, pair)
+        else:
+            counts = _top_in_part(design, face, top)
+            with model.sheet.part(face.key, title):
+                worst = _record_face(design, face, top, counts)
 
 
-def _same_section(model: Model, first: Face, second: Face) -> bool:
-    depths = model.inputs.depths
-    return depths[first.span - 1].value == depths[second.span - 1].value
+def _same_section(design: Design, first: Face, second: Face) -> bool:
+    depths = design.model.inputs.depths
+    if depths[first.span - 1].value != depths[second.span - 1].value:
+        return False
+    return not design.given or same(design.top_counted(first), design.top_counted(second))
 
 
 def record_no_moment(model: Model, face: Face) -> None:
@@ -157,17 +229,33 @@ def record_demand(steps: Steps, model: Model, face: Face) -> None:
     record_forces(steps, model, demand, face.near, x=x)
 
 
-def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict[str, Entry]:
-    """Record a face in full; return its resistance and bars for the other face."""
+def _record_face_without(design: Design, face: Face) -> None:
+    """Record a face at which no given top bars stand."""
+    steps = begin(design.model, face.span, "b_w")
+    record_demand(steps, design.model, face)
+    steps.place.pop("h_f", None)
+    record_depth_assumed(steps, design.model.inputs.stirrup, design.designed.bars.holders)
+    record_without(steps, "rectangular", "top")
+
+
+def _record_face(
+    design: Design, face: Face, top: TopBars, counts: Mapping[str, Entry]
+) -> dict[str, Entry]:
+    """Record a face in full; return its resistance and bars for the other face.
+
+    ``counts`` are d and A_s of bars that count in part.
+    """
+    model = design.model
     sheet, inputs = model.sheet, model.inputs
     steps = begin(model, face.span, "b_w")
     record_demand(steps, model, face)
     steps.place.pop("h_f", None)
     _record_top_bars(steps, model, face, top)
+    steps.bind(**counts)
     required(steps, "rectangular")
     steps.check(flexure.ENOUGH_STEEL)
     M_r = resistance(steps, "rectangular")
-    record_yield(steps, pair)
+    record_yield(steps, design.pair)
     steps.check(flexure.STRENGTH)
     _record_redistribution(steps, model, face)
     record_proof(steps, ("rectangle", "one layer"), M_r)
@@ -180,7 +268,7 @@ def _record_face(model: Model, face: Face, top: TopBars, pair: CodePair) -> dict
         steps.check(minimum.SPREAD)
     cracks_inside(steps, inputs.exposure, (top.web,), TENSION_AREAS[inputs.shape])
     _take(steps, _SHARED)
-    made = sheet.part_entries
+    made = dict(sheet.part_entries) | dict(counts)
     return {name: made[name] for name in _SHARED if name in made}
 
 

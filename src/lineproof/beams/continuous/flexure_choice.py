@@ -79,7 +79,7 @@ def choose_bottom(
 ) -> dict[int, Chosen]:
     """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`.
 
-    Of bars given along the beam: no item for a span whose middle none of them cross.
+    Of bars given along the beam: no item for a span whose largest moment none of them cross.
 
     ``least`` is the area that shear and torsion ask for, by span; ``anchored`` tells whether bars
     of a size can be anchored in the end supports.

@@ -19,6 +19,7 @@ from lineproof.beams.continuous.symbols import code, stated
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.record import Entry
+from lineproof.standards.a23_3.deflection_stages import HOGGING_SIZE
 
 Factors = Mapping[Row, float]
 
@@ -71,6 +72,25 @@ def record_construction(steps: Steps, model: Model, span: int) -> dict[str, Entr
 
 
 _BUILDING = "dead and construction load"
+
+
+def record_at(
+    steps: Steps,
+    model: Model,
+    factors: Factors,
+    words: str,
+    *,
+    span: int,
+    x: Entry,
+    earlier: Mapping[str, Entry] | None = None,
+) -> Entry:
+    """Record inside the open part the moment of a stage at a place of a span; return it.
+
+    ``x`` is the distance from the left axis; the moment is a size, positive. ``earlier`` has the
+    moments of a construction stage, which are then those of the ends.
+    """
+    lines = _Lines(steps, model, factors, words, span)
+    return lines.record_at(x, earlier or {})
 
 
 class _Lines:
@@ -155,6 +175,79 @@ class _Lines:
         middle = self._line(text, "kN.m", "Moment at midspan")
         return {entry.symbol: entry for entry in (*ends, middle)}
 
+    def record_at(self, x: Entry, earlier: Mapping[str, Entry]) -> Entry:
+        """Record the moment at a place from the loads and the moments at the axes; its size."""
+        self.names["x_f"] = x
+        load, names = "w_s", ("M_h1", "M_h2")
+        if earlier:
+            load, names = f"(w_D{self.span} + w_cn)", ("M_ae1", "M_ae2")
+            self.names |= {
+                f"w_D{self.span}": self.model.uniform["D", self.span],
+                "w_cn": self.model.sheet.entry(f"{LOADS}/w_cn"), **earlier,
+            }  # fmt: skip
+        else:
+            self._record_load(load)
+        load = load if earlier or load in self.names else ""
+        if self.model.forces.beam.cantilever(self.span):
+            terms = self._hanging(x.value, load)
+        else:
+            terms = self._simple(x.value, load) + self._from_ends(names, known=bool(earlier))
+        text = " + ".join(terms).replace("+ -", "-")
+        made = self._line(f"M_s = {text}", "kN.m", "Moment at this place, negative where it hogs")
+        return made if made.value >= 0 else self.steps.line(HOGGING_SIZE, M_s=made)
+
+    def _from_ends(self, names: tuple[str, str], *, known: bool) -> list[str]:
+        """Return what the hogging moments at both axes take away at x_f; record them first."""
+        sides: tuple[tuple[End, str, str], ...] = (
+            ("left", names[0], "(l - x_f)"), ("right", names[1], "x_f"),
+        )  # fmt: skip
+        for end, symbol, _ in sides:
+            if not known and self._any(end):
+                self.record_end(end, symbol, f"at the {end} support")
+        return [f"-{name}*{arm}/l" for _, name, arm in sides if name in self.names]
+
+    def _simple(self, x: float, load: str) -> list[str]:
+        """Return what the loads give at x_f of the simple span."""
+        terms = [f"{load}*x_f*(l - x_f)/2"] if load else []
+        for single in self._single():
+            n, factor = single.number, factor_text(self.on_span[single.kind])
+            self.names |= single.entries
+            if single.at is not None:
+                a = f"a_x{n}"
+                arms = f"(l - {a})*x_f" if single.at.value >= x else f"{a}*(l - x_f)"
+                terms.append(f"{factor}*P_x{n}*{arms}/l")
+                continue
+            s, e, first, last = _stretch(single)
+            whole = f"{factor}*w_x{n}*({e} - {s})"
+            if last <= x:
+                terms.append(f"{whole}*({s} + {e})/2*(l - x_f)/l")
+                continue
+            terms.append(f"{whole}*(l - ({s} + {e})/2)*x_f/l")
+            if first < x:
+                terms.append(f"-{factor}*w_x{n}*(x_f - {s})**2/2")
+        return terms
+
+    def _hanging(self, x: float, load: str) -> list[str]:
+        """Return what the loads beyond x_f, towards the free end of a cantilever, give there."""
+        right = self.model.inputs.supports[self.span].kind == "free"
+        terms = [f"-{load}*{'(l - x_f)' if right else 'x_f'}**2/2"] if load else []
+        for single in self._single():
+            n, factor = single.number, factor_text(self.on_span[single.kind])
+            self.names |= single.entries
+            if single.at is not None:
+                if (single.at.value > x) == right:
+                    arm = f"(a_x{n} - x_f)" if right else f"(x_f - a_x{n})"
+                    terms.append(f"-{factor}*P_x{n}*{arm}")
+                continue
+            s, e, first, last = _stretch(single)
+            if first < x < last:
+                end = f"({e} - x_f)" if right else f"(x_f - {s})"
+                terms.append(f"-{factor}*w_x{n}*{end}**2/2")
+            elif (first >= x) == right:
+                arm = f"(({s} + {e})/2 - x_f)" if right else f"(x_f - ({s} + {e})/2)"
+                terms.append(f"-{factor}*w_x{n}*({e} - {s})*{arm}")
+        return terms or ["0*w_s*l**2"]
+
     def _any(self, end: End) -> bool:
         return any(moment_name(self.model, g, self.span, end) for g in self.by_group)
 
@@ -179,15 +272,22 @@ class _Lines:
         if load.at is not None:
             arm = f"a_x{n}" if load.at.value <= half else f"(l - a_x{n})"
             return f"{factor}*P_x{n}*{arm}/2"
-        if load.start is None or load.end is None:
-            msg = f"load {n} has no place"
-            raise ValueError(msg)
-        s, e, w = f"s_x{n}", f"e_x{n}", f"{factor}*w_x{n}"
-        if load.end.value <= half:
+        s, e, first, last = _stretch(load)
+        w = f"{factor}*w_x{n}"
+        if last <= half:
             return f"{w}*({e} - {s})*({s} + {e})/4"
-        if load.start.value >= half:
+        if first >= half:
             return f"{w}*({e} - {s})*(l - ({s} + {e})/2)/2"
         return f"{w}*(({e} - {s})*(l - ({s} + {e})/2)/2 - (l/2 - {s})**2/2)"
+
+
+def _stretch(load: SingleLoad) -> tuple[str, str, float, float]:
+    """Return the symbols of begin and end of a load over part of a span, and both in mm."""
+    if load.start is None or load.end is None:
+        msg = f"load {load.number} has no place"
+        raise ValueError(msg)
+    n = load.number
+    return f"s_x{n}", f"e_x{n}", load.start.value, load.end.value
 
 
 def _times(factor: float, name: str) -> str:

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.faces import (
     Face,
     faces_of,
@@ -80,7 +81,8 @@ def flexure_rows(model: Model) -> Iterator[Row]:
 def _sag(model: Model, span: int) -> Row:
     entries = model.sheet.entries_of(f"sag-{span}")
     case = short_case(model.forces.sag(span).case)
-    return _moment_row(f"span {span}", case, entries, entries, _bars(entries))
+    counted = entries | bars_of(model.sheet, f"sag-{span}")
+    return _moment_row(f"span {span}", case, entries, counted, _bars(entries))
 
 
 def _bars(entries: Mapping[str, Entry]) -> str:
@@ -102,17 +104,17 @@ def _hog(model: Model, face: Face) -> Row:
         case = f"restraint: {short_case(worst_load)}"
     else:
         case = short_case(model.forces.hog(face.support, face.side).case)
-    worst = entries if "A_s" in entries else _worst_face(model, face)
+    own = face if "A_s" in entries else _worst_face(model, face)
+    worst = model.sheet.entries_of(own.key) | bars_of(model.sheet, own.key)
     return _moment_row(name, case, entries, worst, _bars(worst))
 
 
-def _worst_face(model: Model, face: Face) -> Mapping[str, Entry]:
-    """Return the part of the other face, in which the bars of both are recorded."""
-    other = max(
+def _worst_face(model: Model, face: Face) -> Face:
+    """Return the other face, in whose part the bars of both are recorded."""
+    return max(
         (f for f in faces_of(model) if f.support == face.support and f != face),
         key=lambda f: hogging(model, f),
     )
-    return model.sheet.entries_of(other.key)
 
 
 def _moment_row(

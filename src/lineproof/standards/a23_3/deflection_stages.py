@@ -72,18 +72,20 @@ UNCRACKED_TOP = _criterion(
     key="uncracked-top",
 )
 WHOLE = _criterion(
-    "M_a <= M_crd",
+    "M_a - M_crd <= 0",
+    unit="kN.m",
     clause="9.8.2.3",
-    title="Section without bars, bottom in tension",
+    title="Moment beyond that of cracking where no bars count, bottom in tension",
     basis=MECHANICS,
     yes="The section is not cracked.",
     no="The section cracks and no bars count in it: it has NO stiffness, no deflection is given.",
     key="deflection-whole",
 )
 WHOLE_TOP = _criterion(
-    "M_a <= M_crdn",
+    "M_a - M_crdn <= 0",
+    unit="kN.m",
     clause="9.8.2.3",
-    title="Section without bars, top in tension",
+    title="Moment beyond that of cracking where no bars count, top in tension",
     basis=MECHANICS,
     yes="The section is not cracked.",
     no="The section cracks and no bars count in it: it has NO stiffness, no deflection is given.",
