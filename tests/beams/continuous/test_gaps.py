@@ -120,7 +120,7 @@ def test_the_gap_at_midspan_is_where_the_hand_calculation_has_it(existing: Exist
 
 
 def test_no_resistance_is_printed_where_no_bars_stand(existing: Existing) -> None:
-    """Of the section at the middle, of the station at the gap; the shear there has none either."""
+    """Of the section of the largest moment, and of the station at the gap."""
     _, sheet, record = existing
     for key in ("sag-1/strength", "coverage-bottom/strength"):
         part, name = key.split("/")
@@ -310,6 +310,18 @@ def test_the_bars_at_the_supports_are_those_that_stand_there(existing: Existing)
     assert not any(key.endswith("bars-into-support") for key in record.failed)
 
 
+def test_bars_beside_those_of_the_section_run_into_their_support() -> None:
+    """2-20M run through, 2-20M more end at 2.0 m and begin at 3.0 m: 4-20M reach either support."""
+    ends = [row("bottom", "2-20M", -0.1, 2.0), row("bottom", "2-20M", 3.0, 12.1)]
+    _, sheet = built([row("bottom", "2-20M", -0.1, 12.1), *ends, OVER, *BESIDE])
+    assert sheet.entries_of("sag-1")["A_s"].value == 600
+    for near_end in ("left", "right"):
+        entries = sheet.entries_of(f"anchorage-bottom-1-{near_end}")
+        assert entries["bars-text"].source.text == "Into the support: 4-20M."
+        assert entries["A_se"].value == 1200
+    assert recompute(sheet.close()) == []
+
+
 def test_a_support_without_top_bars_is_not_given_any() -> None:
     """What does not stand is not chosen: no resistance, no bars in the table of the summary."""
     beam, sheet = built([row("bottom", "4-20M", -0.1, 12.1), *BESIDE])
@@ -346,13 +358,16 @@ def gaps_of_span(sheet: Sheet, span: int) -> str:
     return title
 
 
-def test_the_strain_of_no_bars_is_no_number() -> None:
-    """General method: (M_f/d_v + V_f)/(2*E_s*0.003) of bars are asked for, none are there."""
-    beam, sheet = built(shear_method="general", stirrups=[
-        {"span": k, "spacing": "250 mm"} for k in (1, 2)
-    ])  # fmt: skip
+METHODS = {"general": [{"span": k, "spacing": "250 mm"} for k in (1, 2)], "simplified": []}
+"""Stirrups with which the gap is looked at by each method."""
+
+
+@pytest.mark.parametrize("method", METHODS)
+def test_without_bars_in_tension_there_is_no_shear_resistance(method: str) -> None:
+    """(M_f/d_v + V_f)/(2*E_s*0.003) of bars are asked for, none are there: by either method."""
+    beam, sheet = built(shear_method=method, stirrups=METHODS[method])
     parts = [p for p in sheet.parts if "strain-bars" in p.entries]
-    assert parts
+    assert any(p.key.startswith("shear-1-along") for p in parts)
     for part in parts:
         e = part.entries
         M_f, V_f, d_v = (e[n].value for n in ("M_f", "V_f", "d_v"))
@@ -361,9 +376,15 @@ def test_the_strain_of_no_bars_is_no_number() -> None:
         assert there == 0
         assert "V_r" not in e
         assert failing(part)
-    assert recompute(close_anyway(sheet)) == []
-    V_r = [s.V_r for s in beam.design.designed.shear if s.start <= 2650 <= s.end]
-    assert set(V_r) == {0.0}  # in the gap the figure of shears shows none
+    record = close_anyway(sheet)
+    assert recompute(record) == []
+    assert "shear-1-along/strain-bars" in record.failed
+    # In the gap the figure of shears shows none; beside it a bar counts in quarters of 683.6 mm,
+    # rounded down, on stations 50 mm apart: from 2300 - 171 - 50 to 3000 + 171 + 50 at most.
+    shear = [s for s in beam.design.designed.shear if s.end <= 5800]
+    assert {s.V_r for s in shear if s.start < 3000 and s.end > 2300} == {0.0}
+    assert all(s.V_r > 0 for s in shear if s.start >= 850 and s.end < 2300 - L_20 / 4 - 50)
+    assert all(s.V_r > 0 for s in shear if s.start > 3000 + L_20 / 4 + 50 and s.end < 4000)
 
 
 def test_a_hogging_midspan_with_bars_developed_in_part() -> None:

@@ -136,16 +136,15 @@ def _belongs(designed: Designed, run: BarRun, span: int) -> bool:
 
 
 def at_support(designed: Designed, runs: Runs, side: SideOf) -> SideOf:
-    """Return a side of bottom bars with those that stand at the support as kept.
+    """Return a side of bottom bars with those that stand at the face of the support as kept.
 
-    Past a gap they are others than those of the section, all of which are cut before it.
+    Past a gap they are others than those of the section, of which some may run on as well.
     """
-    if side.kept:
-        return side
     near, half = side.near, half_of(designed, side.span, side.near)
     own = [run for run in runs if _belongs(designed, run, side.span)]
     there = at_section(own, "bottom", along(designed, side.span, near, half + _INSIDE))
-    tips = [(distance(designed, side.span, near, tip(r, near)), r) for r in there]
+    last = [(whole(designed, runs, run, near), run) for run in there]
+    tips = [(distance(designed, side.span, near, tip(end, near)), run) for end, run in last]
     inside = [(t, r) for t, r in tips if t <= half]
     t_kept = max((t for t, _ in inside), default=half)
     return replace(side, cuts=(), kept=tuple(r for _, r in inside), t_kept=t_kept)

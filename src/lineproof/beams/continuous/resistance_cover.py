@@ -58,14 +58,13 @@ class Station:
 class Gap:
     """A stretch along the beam in which the bars of a face do not carry what they must.
 
-    ``left`` is the left axis of the span, ``at`` the worst station of the gap.
+    ``at`` is its worst station.
     """
 
     face: Face
     span: int
     start: float
     end: float
-    left: float
     at: Station
 
     @property
@@ -81,11 +80,14 @@ class Gap:
     @property
     def title(self) -> str:
         """Where it is, from the left axis of its span, as a check of it is called."""
-        start, end = ((x - self.left) / 1e3 for x in (self.start, self.end))
-        return (
-            f"Gap in the {self.face} bars, span {self.span}, {start:.2f} to {end:.2f} m from its "
-            "left axis"
-        )
+        return f"Gap in the {self.face} bars, span {self.span}, {self._from_axis} its left axis"
+
+    @property
+    def _from_axis(self) -> str:
+        """From where to where it reaches, from the left axis of its span, in words."""
+        left = self.at.x - self.at.local
+        start, end = ((x - left) / 1e3 for x in (self.start, self.end))
+        return f"{start:.2f} to {end:.2f} m from"
 
     def __str__(self) -> str:
         """Say where it is, and what acts and holds at its worst station."""
@@ -94,10 +96,9 @@ class Gap:
         now, held = at.M_f, at.M_r
         if at.by_tension:
             what, unit, size, now, held = "tension", "kN", 1e3, at.F, at.F_r
-        start, end = ((x - self.left) / 1e3 for x in (self.start, self.end))
         return (
             f"{self.face} bars, span {self.span}: not enough from {self.start:.0f} to "
-            f"{self.end:.0f} mm along the beam ({ratio}), that is {start:.2f} to {end:.2f} m from "
+            f"{self.end:.0f} mm along the beam ({ratio}), that is {self._from_axis} "
             f"the left axis of the span; worst at {at.local / 1e3:.2f} m: a {what} of "
             f"{now / size:.0f} {unit}, resistance {held / size:.0f} {unit}"
         )
@@ -207,12 +208,11 @@ def _gaps(
     breaks = np.flatnonzero(np.diff(bad) > 1)
     firsts = [int(bad[0]), *(int(bad[i + 1]) for i in breaks)]
     lasts = [*(int(bad[i]) for i in breaks), int(bad[-1])]
-    left = designed.outline.axes[demand.span - 1]
     made = []
     for a, b in zip(firsts, lasts, strict=True):
         worst = _worst_in(demand.side(face), ratio, a, b)
         at = _station(designed, demand, face, provided, worst)
-        made.append(Gap(face, demand.span, float(demand.x[a]), float(demand.x[b]), left, at))
+        made.append(Gap(face, demand.span, float(demand.x[a]), float(demand.x[b]), at))
     return made
 
 

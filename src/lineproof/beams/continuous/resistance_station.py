@@ -21,7 +21,7 @@ from lineproof.beams.continuous.cutoff_sets import (
 from lineproof.beams.continuous.cutoff_support import Hooks, record_section
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.resistance import Standing, top_layers
-from lineproof.beams.continuous.resistance_cover import Gap, Station
+from lineproof.beams.continuous.resistance_cover import ROUND_OFF, Gap, Station, ratio_of
 from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, stretch_at
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps
@@ -31,6 +31,10 @@ from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import flexure, shear_bars
 
 COVERAGE = "coverage"
+_NONE_COUNT = (
+    "At {x:g} mm from the left axis of span {span} no {face} bars count: none stand there, or they "
+    "end there."
+)
 
 
 @dataclass(frozen=True, eq=False, slots=True)
@@ -43,8 +47,11 @@ class Laid:
     standing: Sequence[Standing]
     gaps: Sequence[Gap] = ()
 
-    def title(self, station: Station) -> str:
-        """Return the title of the check of a station: where the gap is that it lies in."""
+    def title(self, station: Station, *, tension: bool) -> str:
+        """Return the title of a check of a station: where the gap is, if it is this that fails."""
+        pair = (station.F, station.F_r) if tension else (station.M_f, station.M_r)
+        if ratio_of(*pair) <= 1 + ROUND_OFF:
+            return ""
         gap = next((gap for gap in self.gaps if gap.holds(station)), None)
         return "" if gap is None else gap.title
 
@@ -59,37 +66,23 @@ def _near(writers: Writers, station: Station) -> tuple[End, float]:
 
 def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
     """Record the moment of a station against the bars there, in a part; a failing check if none."""
-    if station.M_r <= 0:
-        _record_nothing(laid, station, key, title)
-        return
-    writers, face = laid.writers, station.face
-    near, t = _near(writers, station)
-    with writers.sheet.part(key, title):
-        steps = _developed(laid, station)
-        record_resistance(steps, writers, face)
-        x = _record_place(writers, station, near, t)
-        demand = _demand(writers, station, tension=False)
-        writers.forces(steps, demand, near, x)
-        steps.check(flexure.STRENGTH, title=laid.title(station))
-
-
-def _record_nothing(laid: Laid, station: Station, key: str, title: str) -> None:
-    """Record a check that fails: no bars count at a station that a moment asks for."""
     writers, face = laid.writers, station.face
     sheet = writers.sheet
     near, t = _near(writers, station)
+    bare = station.M_r <= 0
     with sheet.part(key, title):
-        sheet.note(
-            "no-bars",
-            f"At {station.local:g} mm from the left axis of span {station.span} no {face} bars "
-            "count: none stand there, or they end there.",
-            title="Gap",
-        )
-        steps = begin(writers, sheet, station.span, face)
+        if bare:
+            text = _NONE_COUNT.format(x=station.local, span=station.span, face=face)
+            sheet.note("no-bars", text, title="Gap")
+            steps = begin(writers, sheet, station.span, face)
+        else:
+            steps = _developed(laid, station)
+            record_resistance(steps, writers, face)
         x = _record_place(writers, station, near, t)
         writers.forces(steps, _demand(writers, station, tension=False), near, x)
-        steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
-        steps.check(flexure.STRENGTH, title=laid.title(station))
+        if bare:
+            steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
+        steps.check(flexure.STRENGTH, title=laid.title(station, tension=False))
 
 
 def _record_place(writers: Writers, station: Station, near: End, t: float) -> Entry:
@@ -198,11 +191,11 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
         steps.bind(d_v=d_v)
         steps.line(clause.TENSION if helps else clause.TENSION_OTHER_SIDE)
         if cap is None:
-            steps.check(shear_bars.TENSION_SIDE_HOLDS, title=laid.title(station))
+            steps.check(shear_bars.TENSION_SIDE_HOLDS, title=laid.title(station, tension=True))
             return
         steps.bind(A_sr=cap)
         steps.line(shear_bars.TENSION_SIDE_CAPPED)
-        steps.check(shear_bars.CAPPED_HOLDS, title=laid.title(station))
+        steps.check(shear_bars.CAPPED_HOLDS, title=laid.title(station, tension=True))
 
 
 def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:

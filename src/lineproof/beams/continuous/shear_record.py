@@ -26,6 +26,10 @@ _OUT_OF_RANGE = (
     "The strain lies outside the range of the general method: no resistance is given, and the "
     "section does NOT hold. More bars on the face in tension, or a deeper beam."
 )
+_NO_BARS = (
+    "No bars count on the face in tension: no resistance is given, and the section does NOT hold. "
+    "Bars that are developed here are needed."
+)
 _MIXED = (
     "The moment changes its sign near the section: the smaller of the depths to the top and to "
 )
@@ -96,7 +100,8 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
     _same(steps, "M_f", section.values["M_f"], V_f * section.values["d_v"])
     record_torsion(steps, basis, section)
     if not _record_method(steps, basis, section):
-        _note_other(steps, _OUT_OF_RANGE, "out-of-range", "Resistance")
+        text = _OUT_OF_RANGE if section.A_s > 0 else _NO_BARS
+        _note_other(steps, text, "out-of-range", "Resistance")
         return
     steps.line(shear.V_C)
     steps.line(shear.V_R_MAX)
@@ -114,13 +119,14 @@ def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> bo
     if section.plain:
         steps.line(shear.A_G)
         steps.line(shear.S_Z)
+    bare = section.A_s == 0
+    if section.counts and (bare or basis.method == "general"):
+        steps.line(torsion.SHEAR_IN_STRAIN)
+    if bare:  # the strain of no bars at all is no number, and neither method means a section so
+        steps.line(torsion.LEAST_BARS if section.counts else shear.LEAST_BARS)
+        steps.check(shear.BARS_IN_RANGE)
+        return False
     if basis.method == "general":
-        if section.counts:
-            steps.line(torsion.SHEAR_IN_STRAIN)
-        if section.A_s == 0:  # the strain of no bars at all is no number
-            steps.line(torsion.LEAST_BARS if section.counts else shear.LEAST_BARS)
-            steps.check(shear.BARS_IN_RANGE)
-            return False
         steps.line(torsion.EPS_X if section.counts else shear.EPS_X)
         if not steps.check(shear.STRAIN_IN_RANGE):
             return False
@@ -191,9 +197,6 @@ def _record_change(steps: Steps, section: ShearSection) -> None:
 def _record_other(steps: Steps, basis: ShearBasis) -> None:
     """Record for information what the other method gives, with symbols of its own."""
     if basis.method == "simplified":
-        if steps.entry("A_s").value == 0:
-            _note_other(steps, "The general method does not apply: no bars count in tension here.")
-            return
         names = {"eps_x": "eps_xg", "beta": "beta_g", "theta": "theta_g"}
         made = {"eps_x": steps.line(shear.EPS_X, symbol=names["eps_x"])}
         if made["eps_x"].value > 0.003:  # noqa: PLR2004 - 11.3.6.4

@@ -377,22 +377,27 @@ def _torsion(numbers: SpanNumbers, v: dict[str, Any]) -> None:
 
 
 def _strain(basis: ShearBasis, v: dict[str, Any]) -> None:
-    """Find strain, factor and angle by the chosen method, with minimum stirrups and without."""
+    """Find strain, factor and angle by the chosen method, with minimum stirrups and without.
+
+    The strain asked is kept beyond its range where no bars count in tension, by either method:
+    there is no resistance.
+    """
     v["a_g"] = value(shear.A_G, v)
     v["s_ze"] = value(shear.S_ZE, v | {"s_z": v["d_v"]})
-    v["eps_asked"] = np.zeros_like(v["M"])
+    bare = v["A_s"] <= 0
+    v["A_s"] = np.maximum(v["A_s"], LEAST_AREA)
+    asked = value(shear.EPS_X, v)
+    if v["counts"].any():
+        v["V_fe"] = value(torsion.SHEAR_IN_STRAIN, v)
+        asked = np.where(v["counts"], value(torsion.EPS_X, v), asked)
     if basis.method == "simplified":
+        v["eps_asked"] = np.where(bare, asked, 0.0)
         row = shear.SIMPLIFIED.rows["minimum stirrups or more"]
         v["beta"] = np.full_like(v["M"], float(row["beta"]))
         v["theta"] = np.full_like(v["M"], float(row["theta"]))
         coarse = v["a_g"] >= COARSE
         v["beta_plain"] = value(shear.BETA_D_V if coarse else shear.BETA_S_ZE, v)
         return
-    v["A_s"] = np.maximum(v["A_s"], LEAST_AREA)
-    asked = value(shear.EPS_X, v)
-    if v["counts"].any():
-        v["V_fe"] = value(torsion.SHEAR_IN_STRAIN, v)
-        asked = np.where(v["counts"], value(torsion.EPS_X, v), asked)
     v["eps_asked"] = asked
     v["eps_x"] = np.minimum(asked, MOST_STRAIN)
     v["beta"], v["theta"] = value(shear.BETA_STIRRUPS, v), value(shear.THETA, v)

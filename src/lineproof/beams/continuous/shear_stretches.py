@@ -236,7 +236,7 @@ def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ..
         columns = check.state.columns + left
         V_s, v = np.asarray(check.bars["V_s"]), check.state.v
         V_c = np.where(check.plain, v["V_plain"], v["V_c"])
-        in_range = v["eps_asked"] <= MOST_STRAIN * (1 + 1e-12)  # beyond it there is no resistance
+        in_range = v["eps_asked"] <= MOST_STRAIN * (1 + 1e-12)  # beyond it, or without bars, none
         V_r = np.where(in_range, np.minimum(V_c + V_s, v["V_rmax"]), 0.0)
         for i, (start, end) in enumerate(pairwise(columns.tolist())):
             both = [i, i + 1]
