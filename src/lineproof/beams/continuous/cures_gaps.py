@@ -23,7 +23,7 @@ from lineproof.beams.continuous.cutoff import STEP, ceil50, floor50
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.detailing_data import Designed
-from lineproof.beams.continuous.detailing_given import fit, section_bars_of
+from lineproof.beams.continuous.detailing_given import bottom_places, fit, section_bars_of
 from lineproof.beams.continuous.laps import bad_laps
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import provide, stand
@@ -148,7 +148,8 @@ def _may_be_given(designed: Designed, runs: Runs) -> bool:
     if not fit(runs, designed.basis):
         return False
     try:
-        section_bars_of(runs, designed.outline, designed.bars.holders)
+        places = bottom_places(designed.outline, designed.forces)
+        section_bars_of(runs, designed.outline, designed.bars.holders, places)
     except UserError:
         return False
     return True

@@ -36,6 +36,7 @@ from lineproof.beams.continuous.detailing_data import (
 from lineproof.beams.continuous.detailing_data import TopBars as LaidTop
 from lineproof.beams.continuous.detailing_given import (
     beside_gap,
+    bottom_places,
     read_given_runs,
     section_bars_of,
     top_bars_at,
@@ -170,7 +171,7 @@ def _designed(
     )
     flexure_choice.refuse_unfit(bottom, "bottom_bars")
     flexure_choice.refuse_unfit(top, "top_bars")
-    beside = _beside(bare, bottom, runs, _sag_places(model, bare.outline))
+    beside = _beside(bare, bottom, runs, bottom_places(bare.outline, model.forces))
     bars = _section_bars(model, bottom, top, asked.holders, beside)
     designed = replace(bare, bars=bars)
     if before is not None:
@@ -293,17 +294,10 @@ def _given_sections(
     """Return the bars of the sections that are given, as such or as runs along the beam."""
     if runs is None:
         return flexure_choice.given_bottom(model), flexure_choice.given_top_bars(model, pair)
-    found = section_bars_of(runs, outline, HOLDERS, _sag_places(model, outline))
+    found = section_bars_of(runs, outline, HOLDERS, bottom_places(outline, model.forces))
     bottom = {span: layers for span, layers in enumerate(found.bottom, start=1) if layers}
     top = {support: _as_chosen(each, model) for support, each in enumerate(found.top, start=1)}
     return bottom, {support: each for support, each in top.items() if each is not None}
-
-
-def _sag_places(model: Model, outline: BeamOutline) -> list[float]:
-    """Return where the bottom bars of every span are counted: of a cantilever at its middle."""
-    middles = [sum(outline.faces(span)) / 2 for span in range(1, model.spans + 1)]
-    places = {k: outline.axes[k - 1] + model.forces.sag(k).x for k in faces.sagging_spans(model)}
-    return [places.get(span, middle) for span, middle in enumerate(middles, start=1)]
 
 
 def _as_chosen(top: LaidTop, model: Model) -> TopBars | None:

@@ -11,6 +11,7 @@ from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, value
 from lineproof.beams.continuous.cutoff_ends import at_section, top_section
 from lineproof.beams.continuous.detailing_data import Basis, SectionBars, TopBars
+from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
 from lineproof.beams.continuous.resistance import lap_pairs
 from lineproof.errors import FaultList, UserError
@@ -242,6 +243,19 @@ def section_bars_of(
         top.append(TopBars() if built.kind == "free" else _top_at(kept, x, name, faults))
     faults.raise_if_any()
     return SectionBars(tuple(bottom), tuple(top), holders)
+
+
+def bottom_places(outline: BeamOutline, forces: Forces) -> list[float]:
+    """Return where the bottom bars of every span are counted along the beam [mm].
+
+    It is where its moment is largest; of a cantilever, which has none, the middle.
+    """
+    return [
+        sum(outline.faces(span)) / 2
+        if forces.beam.cantilever(span)
+        else outline.axes[span - 1] + forces.sag(span).x
+        for span in range(1, len(outline.lengths) + 1)
+    ]
 
 
 def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
