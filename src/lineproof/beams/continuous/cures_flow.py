@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import math
-import re
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
@@ -22,7 +21,12 @@ from lineproof.beams.continuous.cures_sought import beside_each_other, cures_of
 from lineproof.beams.continuous.cures_tried import Tried, failing
 from lineproof.beams.continuous.deflection import Behind, SpanSection, deflections
 from lineproof.beams.continuous.deflection_figure import bent_of
-from lineproof.beams.continuous.deflection_service import Stage, StageMoments, span_behind
+from lineproof.beams.continuous.deflection_service import (
+    Stage,
+    StageMoments,
+    deflection_key,
+    span_behind,
+)
 from lineproof.beams.continuous.deflections import history_of
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.model import Model
@@ -39,7 +43,7 @@ NOT_SOUGHT = (
     "Depth, steel, width and concrete strength are not what this check is about: no cure is sought "
     "among them."
 )
-NONE_CROSS = "Bars that cross this section are needed; how many, the check of its moment says."
+NONE_CROSS = "Bars are needed where none count; how many, the check of the moment there says."
 COLUMNS = [
     "Place",
     "Check that fails",
@@ -49,7 +53,6 @@ COLUMNS = [
 WIDTHS = (44.0, 44.0, 20.0, 0.0)
 TITLE = "What fails and what would cure it"
 _DEFLECTIONS = (clause.LIVE_SMALL, clause.ATTACHED_SMALL, stages.RISE_SMALL)
-_PART = re.compile(r"deflection-(\d+)")
 _BARS = ("A_s", "A_sd")
 """Areas of bars: in a gap, further bars are told with their length instead."""
 _SAME = 1e-9
@@ -182,10 +185,10 @@ def _stirrup_cures(model: Model, check: Entry) -> list[Cure]:
 
 def _deflection_cures(model: Model, check: Entry) -> list[Cure]:
     """Return the cures of a deflection: the whole span is bent again with the changed value."""
-    match = _PART.fullmatch(check.part.key)
-    if match is None:
+    spans = range(1, model.spans + 1)
+    span = next((k for k in spans if deflection_key(k) == check.part.key), 0)
+    if not span:
         return []
-    span = int(match[1])
     values = {name: model.sheet.find(name).value for name in ("f_c", "lambda_", "gamma_c")}
     try:
         before = _behind(model, span)

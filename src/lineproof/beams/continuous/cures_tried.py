@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterable
 from dataclasses import dataclass, field
 from typing import Any
 
+from lineproof.beams.continuous.deflection_service import DEFLECTION
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_station import COVERAGE
 from lineproof.errors import UserError
@@ -26,9 +27,12 @@ def failing(part: Part) -> list[Entry]:
 
 
 def failing_of(parts: Iterable[Part]) -> Failing:
-    """Return the checks that fail in parts, without the cover: a cure of it looks at all spans."""
+    """Return the checks that fail in parts, without the cover: a cure of it looks at all spans.
+
+    A deflection fails as one: with other bars it may be another of its checks that tells so.
+    """
     return frozenset(
-        (part.key, check.symbol)
+        (part.key, "" if part.key.startswith(DEFLECTION) else check.symbol)
         for part in parts
         if not part.key.startswith(COVERAGE)
         for check in failing(part)

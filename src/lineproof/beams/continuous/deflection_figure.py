@@ -15,6 +15,7 @@ from lineproof.beams.continuous.deflection_hinges import stiffness_checks
 from lineproof.beams.continuous.deflection_service import (
     Stage,
     StageMoments,
+    deflection_key,
     free_end,
     span_behind,
 )
@@ -85,7 +86,7 @@ def _pieces(design: Design, span: int, behind: dict[int, Behind]) -> tuple[Defle
 
 def _earlier(model: Model, span: int) -> tuple[float, float, float]:
     """Return the recorded moments of a construction stage: at midspan, left, right [N.mm]."""
-    key = f"deflection-{span}-construction"
+    key = deflection_key(span, "construction")
     entries = next((part.entries for part in model.sheet.parts if part.key == key), {})
     values = [entries[n].value if n in entries else 0.0 for n in ("M_aem", "M_ae1", "M_ae2")]
     return values[0], values[1], values[2]

@@ -18,7 +18,7 @@ from lineproof.beams.analysis.solve import Row
 from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.anchorage_record import plain
 from lineproof.beams.continuous.deflection_record import WORDS, RecordedDeflection
-from lineproof.beams.continuous.deflection_service import ServiceMoments
+from lineproof.beams.continuous.deflection_service import ServiceMoments, deflection_key
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.layout import Face
@@ -80,9 +80,10 @@ def hinge_of(design: Design, service: ServiceMoments) -> Hinge | None:
     for words, factors in _stages(model, service):
         M = np.array([factors.get(row, 0.0) for row in solution.rows]) @ moments
         for face, sign in zip(FACES, (1.0, -1.0), strict=True):
-            over = np.where(bare[face], sign * M - limits[face] * (1 + ROUND_OFF), -1.0)
-            if over.max() > 0:
-                return Hinge(span, face, float(x[over.argmax()]), words, factors)
+            acting = np.where(bare[face], sign * M, 0.0)
+            if acting.max() > limits[face] * (1 + ROUND_OFF):
+                worst = np.flatnonzero(acting >= acting.max() * (1 - ROUND_OFF))[0]
+                return Hinge(span, face, float(x[worst]), words, factors)
     return None
 
 
@@ -142,7 +143,7 @@ def record_hinge(
     design: Design, hinge: Hinge, earlier: Mapping[str, Entry], name: str
 ) -> RecordedDeflection:
     """Record, in place of the limits, the check that fails for want of stiffness."""
-    model, key = design.model, f"deflection-{hinge.span}"
+    model, key = design.model, deflection_key(hinge.span)
     sheet = model.sheet
     with sheet.part(key, f"Deflection of {name}: no stiffness"):
         sheet.note("no-stiffness", _NOTE, title="Deflection", basis=MECHANICS)
@@ -166,7 +167,7 @@ def record_hinge(
 def record_beside(sheet: Sheet, span: int, name: str, hinge: int) -> RecordedDeflection:
     """Record, in place of the limits, that a span continuous with a hinge is given none."""
     (found,) = stiffness_checks(sheet, hinge)
-    with sheet.part(f"deflection-{span}", f"Deflection of {name}: not given"):
+    with sheet.part(deflection_key(span), f"Deflection of {name}: not given"):
         text = _BESIDE.format(hinge=hinge)
         sheet.note("no-stiffness", text, title="Deflection", basis=MECHANICS)
         args: dict[str, Any] = dict(zip(found.source.names, found.args, strict=True))
@@ -176,7 +177,7 @@ def record_beside(sheet: Sheet, span: int, name: str, hinge: int) -> RecordedDef
 
 def stiffness_checks(sheet: Sheet, span: int) -> list[Entry]:
     """Return the check that a span fails for want of stiffness, if it does."""
-    key = f"deflection-{span}"
+    key = deflection_key(span)
     entries = next((part.entries for part in sheet.parts if part.key == key), {})
     return [e for e in entries.values() if e.source in (stages.WHOLE, stages.WHOLE_TOP)]
 

@@ -21,7 +21,7 @@ from lineproof.beams.continuous.deflection import (
 )
 from lineproof.beams.continuous.deflection_limits import record_limits
 from lineproof.beams.continuous.deflection_local import LocalLoad, Sums, record_local
-from lineproof.beams.continuous.deflection_service import STAGES, FreeEnd, Stage
+from lineproof.beams.continuous.deflection_service import STAGES, FreeEnd, Stage, deflection_key
 from lineproof.beams.steps import Steps, only
 from lineproof.formula import Formula
 from lineproof.record import Entry
@@ -128,7 +128,7 @@ def record_deflection(
     recorded and checked), and is "" where it cannot (``ServiceMoments.lifting``). ``calculate``
     also where the span-depth table asks for no calculation: a span behind a cantilever needs it.
     """
-    key = f"deflection-{span.number}"
+    key = deflection_key(span.number)
     steps = Steps(sheet, span.span)
     if not (calculate or is_calculated(sheet, span, carries)):
         with sheet.part(key, f"Deflection of {span.name}"):
@@ -286,7 +286,7 @@ def _record_tip(steps: Steps, span: SpanEntries, stage: Stage, sums: tuple[Sums,
     M_mb = _with_local(steps, "M_mb", sums[1], stage)
     # Live load that lifts the tip lies on the span behind: it is as cracked as under all load.
     as_in = "all" if stage == "rise" else stage
-    entries = steps.sheet.entries_of(f"deflection-{span.behind}-{as_in}")
+    entries = steps.sheet.entries_of(deflection_key(span.behind, as_in))
     I_bk = entries["I_ea"] if "I_ea" in entries else entries["I_em"]
     steps.line(stages.ROOT_ROTATION, M_mb=M_mb, I_bk=I_bk)
     named(steps, stages.TIP, SYMBOLS[stage], title)

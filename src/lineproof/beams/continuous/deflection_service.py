@@ -35,6 +35,12 @@ SHARES: Mapping[str, float] = {"L": 0.5, "L_st": 1.0, "S": 0.0}
 SHARE_ASSUMED = "assumed, to be confirmed by the designer"
 _LEFT_OUT = ("W", "E")
 _STORED = ("storage area", "library stack room")
+DEFLECTION = "deflection"
+
+
+def deflection_key(span: int, of: str = "") -> str:
+    """Return the key of the part with the deflection of a span, or ``of`` something in it."""
+    return "-".join((DEFLECTION, str(span), *([of] if of else ())))
 
 
 def sustained_share(use: str) -> tuple[str, str]:

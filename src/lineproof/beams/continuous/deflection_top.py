@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 
 from lineproof.beams.continuous.cutoff import sag_at
-from lineproof.beams.continuous.deflection_service import Stage, StageMoments
+from lineproof.beams.continuous.deflection_service import Stage, StageMoments, deflection_key
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
     Developed,
@@ -41,12 +41,12 @@ _NOTE_BOTTOM = (
 
 def top_key(span: int) -> str:
     """Return the key of the part that holds the top bars at midspan of a span."""
-    return f"deflection-{span}-top"
+    return deflection_key(span, "top")
 
 
 def bottom_key(span: int) -> str:
     """Return the key of the part that holds the bottom bars at midspan of a span."""
-    return f"deflection-{span}-bottom"
+    return deflection_key(span, "bottom")
 
 
 def top_recorded(model: Model, span: int) -> Mapping[str, Entry] | None:

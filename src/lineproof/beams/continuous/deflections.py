@@ -24,6 +24,7 @@ from lineproof.beams.continuous.deflection_record import (
 from lineproof.beams.continuous.deflection_service import (
     SHARES,
     ServiceMoments,
+    deflection_key,
     free_end,
     service_moments,
     span_behind,
@@ -128,7 +129,7 @@ def _earlier(model: Model, span: int) -> dict[str, Entry]:
     if model.inputs.construction_load is None or model.forces.beam.cantilever(span):
         return {}
     title = f"Deflection of span {span}: construction stage"
-    with model.sheet.part(f"deflection-{span}-construction", title):
+    with model.sheet.part(deflection_key(span, "construction"), title):
         model.sheet.note(
             "construction", _CONSTRUCTION, title="Construction stage", clause="9.8.2.3"
         )

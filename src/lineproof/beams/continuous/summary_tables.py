@@ -6,6 +6,7 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 
 from lineproof.beams.analysis.arrangements import LIVE
+from lineproof.beams.continuous.deflection_service import deflection_key
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.faces import (
@@ -165,7 +166,7 @@ def service_rows(model: Model) -> Iterator[Row]:
     for face in faces_of(model):
         yield from _checks(f"support {face.support}, {face.side}", parts[face.key].entries)
     for span in range(1, model.spans + 1):
-        part = parts.get(f"deflection-{span}")
+        part = parts.get(deflection_key(span))
         for key, entry in (part.entries if part is not None else {}).items():
             if entry.kind == "check" and key.startswith("deflection"):
                 whole = entry.source in deflection_stages.NO_STIFFNESS
