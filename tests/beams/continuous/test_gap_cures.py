@@ -225,6 +225,6 @@ def test_every_check_that_is_solved_apart_gets_its_cure() -> None:
                 assert re.search(marks[check.symbol], cure(sheet, part.key)), part.key
                 told.add(kind)
     assert told == {
-        "anchorage-top-n-left-cut-n", "anchorage-top-n-left-cut-n-shear", "deflection-n", "coverage-bottom",
-        "coverage-bottom-tension", "coverage-top", "coverage-top-tension", "coverage-gap-n",
+        "anchorage-top-n-left-cut-n", "anchorage-top-n-left-cut-n-shear", "deflection-n",
+        "coverage-bottom", "coverage-top", "coverage-top-tension", "coverage-gap-n",
     }  # fmt: skip
