@@ -6,6 +6,7 @@ The beam is that of ``test_gaps``.
 from __future__ import annotations
 
 import re
+from pathlib import Path
 from typing import Any
 
 import pytest
@@ -17,6 +18,7 @@ from lineproof.errors import UserError
 from lineproof.sheet import Sheet
 
 from .flow import CALLS, run, start
+from .test_edge_beam import inputs_of
 from .test_gaps import (
     BESIDE,
     D_TOP,
@@ -35,6 +37,7 @@ from .test_gaps import (
     swapped,
 )
 
+NOTEBOOK = Path(__file__).parents[3] / "calcs" / "existing-beam.ipynb"
 AXIS = "m from the axis of support 1"
 
 
@@ -198,6 +201,30 @@ def checked_in(inputs: dict[str, Any], runs: list[Row]) -> bool:
     beam = start(**inputs, bar_runs=runs)
     run(beam)
     return not [g for g in gaps_of(beam) if (g.face, g.span) == ("bottom", 1)]
+
+
+def test_further_bars_as_long_as_those_beside_them_where_shorter_ones_fail_elsewhere() -> None:
+    """Of 5-20M with 2-20M more a third is 2.33 bars, to pass the inflection: 2-20M do no longer.
+
+    Shorter bars close the gap over the column of the existing beam, but that check would fail.
+    """
+    asked = note_beam()
+    words = f"further bars 2-20M from 3.15 to 11.25 {AXIS}"
+    for part in ("coverage-top", "coverage-top-tension", "coverage-gap-2"):
+        assert words in cure(asked, part)
+    given = inputs_of(NOTEBOOK)["bar_runs"]
+    with_it = note_beam(bar_runs=[*given, row("top", "2-20M", 3.15, 11.25)])
+    assert failing_of(with_it.parts) < failing_of(asked.parts)
+    assert not [part.key for part in with_it.parts if part.key.startswith("coverage-gap")]
+    assert not [p.key for p in with_it.parts if p.key.startswith("coverage") and failing(p)]
+    short = failing_of(note_beam(bar_runs=[*given, row("top", "2-20M", 5.2, 9.2)]).parts)
+    assert ("anchorage-top-2-left-inflection", "top-past-inflection") in short
+    assert short - failing_of(asked.parts)
+
+
+def note_beam(**changes: Any) -> Sheet:
+    """The existing beam of the notebook, with other inputs."""
+    return run(start(**(inputs_of(NOTEBOOK) | changes)))
 
 
 def test_every_check_that_is_solved_apart_gets_its_cure() -> None:

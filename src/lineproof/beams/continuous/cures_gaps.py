@@ -7,7 +7,7 @@ the bars must lap, fit and be what may be given.
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -247,20 +247,16 @@ def _further(trial: _Trial) -> Cure:
 
 
 def _of_size(trial: _Trial, size: str) -> Cure | None:
-    """Return the cure by further bars of a size that are developed on both sides of a gap.
+    """Return the cure by further bars of a size; None where no number closes the gap.
 
-    They reach farther where they may not end so near to it. None where no number closes the gap.
+    They are as long as the gap asks for, else longer, where they may not end so near to it.
     """
-    gap, designed = trial.gap, trial.designed
-    bar = BarRun(gap.face, 1, 2, size, gap.start, gap.end)
-    l_d, (low, high) = development_length(designed, bar), designed.outline.ends
-    for farther in _FARTHER:
-        start = max(floor50(gap.start - l_d) - farther, low + designed.end_cover)
-        end = min(ceil50(gap.end + l_d) + farther, high - designed.end_cover)
+    bar = BarRun(trial.gap.face, 1, 2, size, trial.gap.start, trial.gap.end)
+    for index, (start, end) in enumerate(_stretches(trial, bar)):
         made = _number_of(trial, replace(bar, start=start, end=end))
-        if made is None:
+        if made is None and index == 0:
             return None
-        if trial.stands((*trial.runs, made)):
+        if made is not None and trial.stands((*trial.runs, made)):
             layer = "" if made.layer == 1 else ", in a second layer"
             text = (
                 f"further bars {made.number}-{size} from {start / 1e3:.2f} to {end / 1e3:.2f} m "
@@ -268,6 +264,22 @@ def _of_size(trial: _Trial, size: str) -> Cure | None:
             )
             return Cure("number", made.number, text, trial.use((*trial.runs, made)))
     return Cure("number", None, f"none of the further bars tried {_UP_TO} {_NOTHING_ELSE}")
+
+
+def _stretches(trial: _Trial, bar: BarRun) -> Iterator[tuple[float, float]]:
+    """Give the stretches along which further bars are tried, the shortest first.
+
+    They are developed on both sides of the gap, reach farther, or are as long as bars beside it.
+    """
+    gap, designed = trial.gap, trial.designed
+    l_d, (low, high) = development_length(designed, bar), designed.outline.ends
+    near = floor50(gap.start - l_d), ceil50(gap.end + l_d)
+    for farther in _FARTHER:
+        start, end = near[0] - farther, near[1] + farther
+        yield max(start, low + designed.end_cover), min(end, high - designed.end_cover)
+    own = [run for run in trial.runs if run.face == gap.face and run.place == "web"]
+    longer = {(r.start, r.end) for r in own if r.start < near[0] and r.end > near[1]}
+    yield from sorted(longer, key=lambda ends: ends[1] - ends[0])
 
 
 def _number_of(trial: _Trial, bar: BarRun) -> BarRun | None:
