@@ -1,9 +1,14 @@
-"""Bars as an engineer writes them: ``4-25M``, two layers ``4-25M / 2-25M``."""
+"""Bars as an engineer writes them: ``4-25M``, two layers ``4-25M / 2-25M``.
+
+Two sizes in a layer, ``2-25M + 2-20M``, come of bars that are given along a beam.
+"""
 
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
+from collections import Counter
+from collections.abc import Iterable
+from dataclasses import dataclass, replace
 
 from lineproof.errors import UserError
 from lineproof.quantity import echo
@@ -15,23 +20,52 @@ MOST_LAYERS = 2
 
 @dataclass(frozen=True, slots=True)
 class BarLayer:
-    """Bars of one size in one layer."""
+    """Bars in one layer: of one size, or with ``thinner`` ones beside them."""
 
     number: int
     size: str
+    thinner: BarLayer | None = None
 
     @property
     def diameter(self) -> float:
-        """Diameter of one bar [mm]."""
+        """Diameter of one bar, the thickest [mm]."""
         return BARS.number(self.size, "d_b")
+
+    @property
+    def groups(self) -> tuple[BarLayer, ...]:
+        """The bars by size, the thickest first."""
+        if self.thinner is None:
+            return (self,)
+        return (replace(self, thinner=None), *self.thinner.groups)
+
+    @property
+    def count(self) -> int:
+        """Number of bars of all sizes."""
+        return sum(group.number for group in self.groups)
 
     @property
     def area(self) -> float:
         """Area of the layer [mm2]."""
-        return self.number * BARS.number(self.size, "A_b")
+        return sum(group.number * BARS.number(group.size, "A_b") for group in self.groups)
 
     def __str__(self) -> str:
-        return f"{self.number}-{self.size}"
+        return " + ".join(f"{group.number}-{group.size}" for group in self.groups)
+
+
+def layer_of(groups: Iterable[BarLayer]) -> BarLayer:
+    """Return the layer in which bars of several sizes stand beside each other; at least one.
+
+    >>> str(layer_of([BarLayer(1, "20M"), BarLayer(2, "25M"), BarLayer(2, "20M")]))
+    '2-25M + 3-20M'
+    """
+    numbers: Counter[str] = Counter()
+    for group in groups:
+        numbers[group.size] += group.number
+    made: BarLayer | None = None
+    for size in sorted(numbers, key=lambda size: BARS.number(size, "d_b")):
+        made = BarLayer(numbers[size], size, made)
+    assert made is not None  # noqa: S101 - as told above
+    return made
 
 
 def in_line(first: int, second: int) -> bool:
@@ -49,6 +83,52 @@ def spaced(number: int) -> int:
 
 BarLayers = tuple[BarLayer, ...]
 """Layers from the tension face inward."""
+
+
+def of_one_size(layers: BarLayers) -> bool:
+    """Tell whether every layer has bars of one size."""
+    return all(layer.thinner is None for layer in layers)
+
+
+@dataclass(frozen=True, slots=True)
+class TopBars:
+    """Top bars of a section: a layer within the web, and how many bars stand in each overhang.
+
+    Those of the overhangs have the size of the web's but for ``overhang_size``.
+    """
+
+    web: BarLayer
+    overhang: int
+    sides: int
+    overhang_size: str = ""
+
+    @property
+    def spread_size(self) -> str:
+        """Size of the bars in the overhangs."""
+        return self.overhang_size or self.web.size
+
+    @property
+    def of_one_size(self) -> bool:
+        """Tell whether all of them have one size."""
+        return self.web.thinner is None and self.spread_size == self.web.size
+
+    @property
+    def groups(self) -> tuple[BarLayer, ...]:
+        """The bars by size, those of the overhangs last."""
+        spread = self.sides * self.overhang
+        return (*self.web.groups, *((BarLayer(spread, self.spread_size),) if spread else ()))
+
+    @property
+    def area(self) -> float:
+        """Area of all of them [mm2]."""
+        return sum(group.area for group in self.groups)
+
+    def __str__(self) -> str:
+        """Show as written: ``4-20M, 2-20M in each overhang``."""
+        if not self.overhang:
+            return str(self.web)
+        where = "each overhang" if self.sides > 1 else "the overhang"
+        return f"{self.web}, {self.overhang}-{self.spread_size} in {where}"
 
 
 def bars_text(layers: BarLayers) -> str:

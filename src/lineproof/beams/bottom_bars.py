@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.bars import BarLayers, bars_text, spaced
+from lineproof.beams.bars import BarLayers, bars_text, of_one_size, spaced
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -10,6 +10,7 @@ from lineproof.standards.a23_3 import bars
 
 BARS = "bars"
 COMPRESSION_BARS = "compression-bars"
+TWO_SIZES = "The distance between them is taken as if all of a layer had the larger size."
 
 
 def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) -> Entry:
@@ -24,17 +25,25 @@ def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) 
 
 
 def bars_inside(sheet: Sheet, layers: BarLayers, *, stirrup: str, origin: str) -> Entry:
-    """Record bottom bars inside the open part; return the effective depth."""
-    sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.", title="Bars")
+    """Record bottom bars inside the open part; return the effective depth.
+
+    Of layers with bars of two sizes only whether they fit, as if all were of the thicker size, and
+    the depth of each layer to its thicker bars: area and depth of all have a part of their own.
+    """
+    beside = "" if of_one_size(layers) else f" {TWO_SIZES}"
+    sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.{beside}", title="Bars")
     first = layers[0]
     sheet.lookup("d_bs", bars.BARS, stirrup, "d_b")
     sheet.lookup("r_s", bars.STIRRUP_BENDS, stirrup)
     d_b = sheet.lookup("d_b", bars.BARS, first.size)
     A_b = sheet.lookup("A_b", bars.BARS, first.size)
-    n_1 = sheet.given("n_1", str(first.number), source=origin)
+    n_1 = sheet.given("n_1", str(first.count), source=origin)
     s_min = sheet.line(bars.LEAST_CLEAR)
-    s_c = sheet.line(bars.CLEAR, n_b=for_distance(sheet, "n_b", first.number, n_1))
+    s_c = sheet.line(bars.CLEAR, n_b=for_distance(sheet, "n_b", first.count, n_1))
     sheet.check(bars.FITS)
+    if not of_one_size(layers):
+        d_1 = sheet.line(bars.DEPTH_FIRST)
+        return d_1 if len(layers) == 1 else _record_fit_above(sheet, layers, origin, d_b)
     A_s1 = sheet.line(bars.AREA_OF_BARS, symbol="A_s1" if len(layers) > 1 else "", n_b=n_1)
     if len(layers) == 1:
         return sheet.line(bars.DEPTH_ONE_LAYER)
@@ -52,20 +61,26 @@ def for_distance(sheet: Sheet, symbol: str, number: int, given: Entry) -> Entry:
 def _record_second_layer(
     sheet: Sheet, layers: BarLayers, origin: str, first: tuple[Entry, ...]
 ) -> Entry:
+    _record_fit_above(sheet, layers, origin, first[0])
+    made = sheet.part_entries
+    sheet.line(bars.AREA_OF_BARS, symbol="A_s2", n_b=made["n_2"], A_b=made["A_b2"])
+    sheet.line(bars.TOTAL_AREA)
+    return sheet.line(bars.DEPTH_TWO_LAYERS)
+
+
+def _record_fit_above(sheet: Sheet, layers: BarLayers, origin: str, d_b: Entry) -> Entry:
+    """Record that a second layer fits, over bars of diameter d_b; return its depth."""
     second = layers[1]
     d_b2 = sheet.lookup("d_b2", bars.BARS, second.size, "d_b")
-    A_b2 = sheet.lookup("A_b2", bars.BARS, second.size, "A_b", title="area of one bar, layer 2")
-    n_2 = sheet.given("n_2", str(second.number), source=origin)
-    thicker = d_b2 if second.diameter > layers[0].diameter else first[0]
+    sheet.lookup("A_b2", bars.BARS, second.size, "A_b", title="area of one bar, layer 2")
+    n_2 = sheet.given("n_2", str(second.count), source=origin)
+    thicker = d_b2 if second.diameter > layers[0].diameter else d_b
     least = sheet.line(bars.LEAST_CLEAR, symbol="s_min2", d_b=d_b2)
-    n_b = for_distance(sheet, "n_b2", second.number, n_2)
+    n_b = for_distance(sheet, "n_b2", second.count, n_2)
     clear = sheet.line(bars.CLEAR, symbol="s_c2", n_b=n_b, d_b=d_b2)
     sheet.check(bars.FITS_SECOND, s_min2=least, s_c2=clear)
     sheet.line(bars.LAYER_DISTANCE, d_b=thicker)
-    sheet.line(bars.DEPTH_SECOND)
-    sheet.line(bars.AREA_OF_BARS, symbol="A_s2", n_b=n_2, A_b=A_b2)
-    sheet.line(bars.TOTAL_AREA)
-    return sheet.line(bars.DEPTH_TWO_LAYERS)
+    return sheet.line(bars.DEPTH_SECOND)
 
 
 def refuse_unfit(sheet: Sheet, layers: BarLayers, name: str, part: str = BARS) -> None:

@@ -16,9 +16,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from lineproof import beams
-from lineproof.beams.bars import BarLayer, in_line
+from lineproof.beams.bars import BarLayer, TopBars, in_line
 from lineproof.beams.continuous import flexure, flexure_choice
-from lineproof.beams.continuous.bar_choice import Chosen, TopBars
+from lineproof.beams.continuous.bar_choice import Chosen
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.faces import faces_of, hogging, sagging_spans
 from lineproof.errors import UserError

@@ -98,9 +98,13 @@ def test_sections_are_read_from_the_runs() -> None:
     assert section_bars_of(runs, designed.outline, "15M", places) == designed.bars
 
 
-def test_two_sizes_in_one_layer_are_refused() -> None:
-    runs = read_given_runs([GOOD, row(bars="2-20M")], BASIS, PAIR)
-    with pytest.raises(UserError, match="20M and 25M stand in layer 1 of the bottom bars"):
+def test_two_sizes_stand_in_one_layer_and_three_are_refused() -> None:
+    rows = [GOOD, row(bars="1-20M")]
+    runs = read_given_runs(rows, BASIS, PAIR)
+    ((layer,),) = section_bars_of(runs, BASIS.outline, "15M", [3500.0]).bottom
+    assert (str(layer), layer.count, layer.area) == ("2-25M + 1-20M", 3, 1300)
+    runs = read_given_runs([*rows, row(bars="1-15M")], BASIS, PAIR)
+    with pytest.raises(UserError, match="25M, 20M, 15M stand in layer 1 of the bottom bars"):
         section_bars_of(runs, BASIS.outline, "15M", [3500.0])
 
 

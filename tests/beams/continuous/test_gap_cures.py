@@ -14,7 +14,6 @@ import pytest
 from lineproof import beams
 from lineproof.beams.continuous.cures_tried import failing, failing_of
 from lineproof.beams.continuous.resistance_cover import Gap
-from lineproof.errors import UserError
 from lineproof.sheet import Sheet
 
 from .flow import CALLS, run, start
@@ -175,28 +174,36 @@ def test_every_cure_of_bars_that_is_told_is_typed_in_above(sheet: Sheet) -> None
             assert len(re.findall(r"further bars \d|mm longer", text)) == typed
 
 
-def test_further_bars_of_another_size_are_told_in_a_layer_of_their_own() -> None:
-    """7-20M fit beside 2-15M in a web of 700 mm: (617.4 - 2*16 - 7*19.5)/8 = 56 mm clear.
+# The layer of a web of 400 mm takes six bars 20M: (400 - 2*63.8)/5 - 19.5 = 35 mm clear, 30 at
+# least; seven stand 25.9 mm apart. That of 350 mm takes five, 36.1 mm apart; six stand 25 mm apart.
+FURTHER = [
+    ("400 mm", "8 kPa", "2-15M", "4-20M from -0.10 to 5.40", "", row("bottom", "4-20M", -0.1, 5.4)),
+    (
+        "350 mm", "10 kPa", "4-20M", "2-20M from 0.45 to 4.55", ", in a second layer",
+        row("bottom", "2-20M", 0.45, 4.55, layer=2),
+    ),
+]  # fmt: skip
+"""Web, live load, bars that stand, further bars told, their layer, and as they are typed."""
 
-    One size a layer is asked for at the middle of a span, so a second layer is told.
-    """
-    wide = EXISTING | {
-        "b_w": "700 mm", "live_load": "14 kPa",
+
+@pytest.mark.parametrize(("b_w", "load", "stand", "told", "layer", "further"), FURTHER)
+def test_further_bars_stand_beside_those_of_another_size_else_in_line_above(
+    b_w: str, load: str, stand: str, told: str, layer: str, further: Row
+) -> None:
+    """Beside 2-15M the larger 20M fit; beside 4-20M two more do not, and stand above."""
+    inputs = EXISTING | {
+        "b_w": b_w, "live_load": load,
         "stirrups": [{"span": k, "spacing": "100 mm"} for k in (1, 2)],
     }  # fmt: skip
-    standing = [row("bottom", "2-15M", -0.1, 12.1), row("top", "5-25M", -0.1, 12.1)]
-    sheet = run(start(**wide, bar_runs=standing))
-    assert f"further bars 7-20M from -0.10 to 6.15 {AXIS}, in a second layer" in cure(
-        sheet, "coverage-bottom"
-    )
-    further = row("bottom", "7-20M", -0.1, 6.15)
-    through = CALLS[: CALLS.index("flexure") + 1]
-    with pytest.raises(UserError, match="write one size a layer"):
-        run(start(**wide, bar_runs=[*standing, further]), through)
-    assert checked_in(wide, [*standing, further | {"layer": 2}])
+    standing = [row("bottom", stand, -0.1, 12.1), row("top", "4-25M", -0.1, 12.1)]
+    text = cure(run(start(**inputs, bar_runs=standing)), "coverage-bottom")
+    assert f"further bars {told} {AXIS}{layer}" in text
+    assert closes(inputs, [*standing, further])
+    number = int(further["bars"][0])
+    assert not closes(inputs, [*standing, further | {"bars": f"{number - 1}-20M"}])
 
 
-def checked_in(inputs: dict[str, Any], runs: list[Row]) -> bool:
+def closes(inputs: dict[str, Any], runs: list[Row]) -> bool:
     """Whether bars are taken, and leave no gap in the bottom bars of span 1."""
     beam = start(**inputs, bar_runs=runs)
     run(beam)

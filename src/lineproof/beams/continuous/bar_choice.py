@@ -11,7 +11,7 @@ from collections import Counter
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.bars import BarLayer, BarLayers, in_line
+from lineproof.beams.bars import BarLayer, BarLayers, TopBars, in_line
 from lineproof.beams.choice import MOST_BARS, SIZES, bars_for
 from lineproof.beams.continuous.numbers import Numbers, value
 from lineproof.beams.continuous.section_checks import (
@@ -39,27 +39,6 @@ class Section:
     numbers: tuple[Numbers, ...]
     length: float
     least: float = 0.0
-
-
-@dataclass(frozen=True, slots=True)
-class TopBars:
-    """Top bars: those within the web, and how many in each overhang."""
-
-    web: BarLayer
-    overhang: int
-    sides: int
-
-    @property
-    def area(self) -> float:
-        """Area of all of them [mm2]."""
-        return self.web.area + self.sides * self.overhang * self.web.area / self.web.number
-
-    def __str__(self) -> str:
-        """Show as written: ``4-20M, 2-20M in each overhang``."""
-        if not self.overhang:
-            return str(self.web)
-        where = "each overhang" if self.sides > 1 else "the overhang"
-        return f"{self.web}, {self.overhang}-{self.web.size} in {where}"
 
 
 Bars = BarLayers | TopBars
@@ -183,10 +162,7 @@ def top_trial(rules: Rules, stirrup: str) -> Trial:
             if bars.web.area < section.least:
                 why[FOR_SHEAR] += 1
                 continue
-            faces = [
-                top_checks(dict(at), rules, bars.web, bars.overhang, stirrup)
-                for at in section.numbers
-            ]
+            faces = [top_checks(dict(at), rules, bars, stirrup) for at in section.numbers]
             checks = max(faces, key=lambda face: max(face.values()))
             if not fails(checks):
                 return Chosen(section.name, bars, checks), ""

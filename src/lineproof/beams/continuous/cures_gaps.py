@@ -12,6 +12,7 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
+from lineproof.beams.bars import in_line
 from lineproof.beams.choice import SIZES
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
@@ -283,13 +284,28 @@ def _stretches(trial: _Trial, bar: BarRun) -> Iterator[tuple[float, float]]:
 
 
 def _number_of(trial: _Trial, bar: BarRun) -> BarRun | None:
-    """Return the fewest of further bars that close a gap, in the first layer that takes them."""
+    """Return the fewest of further bars that close a gap, in the first layer that takes them.
+
+    In a second layer they stand in line with bars of the first.
+    """
+    first = sum(run.number for run in _first_layer(trial))
     for number in range(1, _MOST_BARS + 1):
         for layer in _LAYERS:
+            if layer > 1 and not in_line(first, number):
+                continue
             made = replace(bar, number=number, layer=layer)
             if find.holds(trial.use((*trial.runs, made))):
                 return made
     return None
+
+
+def _first_layer(trial: _Trial) -> Runs:
+    """Return the bars of the first layer in the web that cross the worst place of the gap."""
+    gap, x = trial.gap, trial.gap.at.x
+    return tuple(
+        run for run in trial.runs
+        if (run.face, run.place, run.layer) == (gap.face, "web", 1) and run.start < x < run.end
+    )  # fmt: skip
 
 
 def _smaller(trial: _Trial) -> Cure:

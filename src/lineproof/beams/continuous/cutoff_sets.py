@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import dataclass
 
-from lineproof.beams.bars import BarLayer, bars_text
+from lineproof.beams.bars import BarLayer, BarLayers, bars_text
 from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, Face
@@ -32,6 +32,16 @@ class Group:
 def grouped(writers: Writers, runs: Iterable[BarRun]) -> tuple[Group, ...]:
     """Return the bars by layer and size, in order."""
     return groups_met(writers.designed, runs)
+
+
+def groups_of_layers(layers: BarLayers) -> tuple[Group, ...]:
+    """Return the bars of the layers of a section by layer and size, in order."""
+    first = layers[0].size
+    return tuple(
+        Group(number, group.size, group.number, first)
+        for number, layer in enumerate(layers, start=1)
+        for group in layer.groups
+    )
 
 
 def groups_met(designed: Designed, runs: Iterable[BarRun]) -> tuple[Group, ...]:

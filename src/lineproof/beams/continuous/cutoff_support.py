@@ -20,9 +20,9 @@ from lineproof.beams.continuous.cutoff import (
 from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes, tip
 from lineproof.beams.continuous.cutoff_record import Site, record_extension, thickest
 from lineproof.beams.continuous.cutoff_sets import (
-    Group,
     begin,
     grouped,
+    groups_of_layers,
     record_area,
     record_developed,
     record_resistance,
@@ -55,9 +55,7 @@ def record_section(
     sheet = writers.sheet
     sheet.note("bars-text", f"{stated}: {bars_text(layers)}.", title="Bars")
     steps = begin(writers, sheet, span, face)
-    first = layers[0].size
-    groups = [Group(i, layer.size, layer.number, first) for i, layer in enumerate(layers, 1)]
-    record_area(steps, groups, "A_s")
+    record_area(steps, groups_of_layers(layers), "A_s")
     steps.line(shear.D_V)
     return steps.place
 

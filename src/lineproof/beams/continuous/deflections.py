@@ -200,7 +200,7 @@ def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
         return None
     for each in (side, "left", "right"):
         found = [p for p in model.sheet.parts if p.key == f"hog-{support}-{each}"]
-        if found and "A_s" in found[0].entries:
+        if found and "bars-text" in found[0].entries:
             return bars_of(model.sheet, found[0].key)
     return None
 

@@ -13,9 +13,9 @@ from functools import cached_property
 from itertools import count
 from typing import Any
 
-from lineproof.beams.bars import BarLayer, BarLayers, bars_text
+from lineproof.beams.bars import BarLayer, BarLayers, TopBars, bars_text
 from lineproof.beams.continuous import faces, flexure_choice
-from lineproof.beams.continuous.bar_choice import Bars, Chosen, TopBars
+from lineproof.beams.continuous.bar_choice import Bars, Chosen
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design_torsion import (
     HOLDERS,
@@ -305,7 +305,8 @@ def _as_chosen(top: LaidTop, model: Model) -> TopBars | None:
     sides = SIDES[model.inputs.shape]
     if not top.web:
         return None
-    return TopBars(top.web[0], top.overhang // sides if sides else 0, sides)
+    beside = top.overhang // sides if sides else 0
+    return TopBars(top.web[0], beside, sides, top.overhang_size)
 
 
 def _beside(
@@ -337,7 +338,7 @@ def _section_bars(
 
 
 def _laid_top(top: TopBars) -> LaidTop:
-    return LaidTop((top.web,), top.sides * top.overhang)
+    return LaidTop((top.web,), top.sides * top.overhang, top.overhang_size)
 
 
 def layers_of(chosen: Chosen) -> BarLayers:

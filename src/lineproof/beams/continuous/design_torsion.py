@@ -115,8 +115,7 @@ def _whole(bars: SectionBars, support: int) -> float:
     top = bars.top[support - 1]
     if not top.web:
         return 2 * BARS.number(bars.holders, "A_b")
-    web = sum(layer.area for layer in top.web)
-    return web + top.overhang * BARS.number(top.web[0].size, "A_b")
+    return sum(layer.area for layer in (*top.web, *top.spread))
 
 
 def _nearest(check: SpanCheck) -> np.ndarray:

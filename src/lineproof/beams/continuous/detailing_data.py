@@ -13,7 +13,7 @@ from typing import Literal
 import numpy as np
 
 from lineproof.beams.analysis.curves import Floats
-from lineproof.beams.bars import BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.continuous.forces import Demand, Forces
 from lineproof.beams.continuous.layout import BeamOutline
 from lineproof.standards.codes import CodePair
@@ -56,10 +56,21 @@ class Stirrups:
 
 @dataclass(frozen=True, slots=True)
 class TopBars:
-    """Top bars of a support: layers in the web, and a count in all overhangs together."""
+    """Top bars of a support: layers in the web, and a count in all overhangs together.
+
+    Those of the overhangs have the size of the first layer but for ``overhang_size``.
+    """
 
     web: BarLayers = ()
     overhang: int = 0
+    overhang_size: str = ""
+
+    @property
+    def spread(self) -> BarLayers:
+        """The bars of the overhangs, as a layer; () for none."""
+        if not self.overhang:
+            return ()
+        return (BarLayer(self.overhang, self.overhang_size or self.web[0].size),)
 
 
 @dataclass(frozen=True, slots=True)

@@ -4,10 +4,11 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import replace
 from itertools import pairwise
 from typing import Any, get_args
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers, layer_of
 from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, value
 from lineproof.beams.continuous.cutoff_ends import at_section, top_section
 from lineproof.beams.continuous.detailing_data import Basis, SectionBars, TopBars
@@ -24,6 +25,8 @@ KEYS = ("face", "bars", "start", "end", "layer", "place", "hook_start", "hook_en
 NEEDED = ("face", "bars", "start", "end")
 FACES, HOOKS, PLACES = get_args(Face), get_args(Hook), ("web", "overhang")
 LAYERS = (1, 2)
+MOST_SIZES = 2
+"""Sizes of bars that may stand in one layer."""
 EXAMPLE = (
     "{'face': 'bottom', 'bars': '2-25M', 'start': '-0.15 m', 'end': '7.75 m'}, distances from the "
     "axis of support 1"
@@ -230,7 +233,7 @@ def section_bars_of(
     """Return the bars of every section as they stand in given runs.
 
     ``bottom_at`` are the places of the sections of the spans along the beam [mm]. No layers where
-    none stand. Raises :class:`UserError` for layers of two sizes.
+    none stand. Raises :class:`UserError` for layers of three sizes.
     """
     kept, faults = tuple(runs), FaultList()
     bottom = [
@@ -267,8 +270,11 @@ def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
 
 
 def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) -> TopBars:
-    overhang = sum(r.number for r in at_section(runs, "top", x) if r.place == "overhang")
-    return TopBars(_web_at(runs, "top", x, name, faults), overhang)
+    beside = [r for r in at_section(runs, "top", x) if r.place == "overhang"]
+    number, web = sum(r.number for r in beside), _web_at(runs, "top", x, name, faults)
+    thinnest = min(beside, key=lambda r: r.diameter).size if beside else ""
+    same = not web or not beside or {r.size for r in beside} == {web[0].size}
+    return TopBars(web, number, "" if same else thinnest)
 
 
 def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int, at: float) -> BarLayers:
@@ -278,8 +284,8 @@ def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int, at: floa
     stretches = [(a, b) for a, b in _stretches(kept, outline) if b > start and a < end]
     for a, b in sorted(stretches, key=lambda each: max(each[0] - at, at - each[1])):
         layers = _web_at(kept, "bottom", (a + b) / 2, f"span {span}", FaultList())
-        if layers:
-            return layers
+        if layers:  # for the depth alone: that of the thicker bars is the smaller one
+            return tuple(replace(layer, thinner=None) for layer in layers)
     return ()
 
 
@@ -289,12 +295,12 @@ def _web_at(
     layers: list[BarLayer] = []
     for layer in LAYERS:
         row = [r for r in at_section(runs, face, x) if r.layer == layer and r.place == "web"]
-        sizes = sorted({r.size for r in row})
-        if len(sizes) > 1:
+        sizes = sorted({r.size for r in row}, reverse=True)
+        if len(sizes) > MOST_SIZES:
             faults.add(
-                f"bar runs: {name}: {' and '.join(sizes)} stand in layer {layer} of the {face} "
-                f"bars; write one size a layer, such as {sizes[0]} for all"
+                f"bar runs: {name}: {', '.join(sizes)} stand in layer {layer} of the {face} bars; "
+                f"write at most two sizes a layer, such as {sizes[0]} and {sizes[-1]}"
             )
         if row:
-            layers.append(BarLayer(sum(r.number for r in row), row[0].size))
+            layers.append(layer_of(BarLayer(r.number, r.size) for r in row))
     return tuple(layers)

@@ -4,10 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
-from lineproof.beams.bottom_bars import bars_inside, for_distance
-from lineproof.beams.continuous.bar_choice import (
-    TopBars,
-)
+from lineproof.beams.bars import TopBars, of_one_size
+from lineproof.beams.bottom_bars import TWO_SIZES, bars_inside, for_distance
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
@@ -107,8 +105,8 @@ def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
     """Record given bottom bars where they count in part; return their d and A_s, else nothing."""
     if not design.given:
         return {}
-    counted = design.bottom_counted(span)
-    area = sum(layer.area for layer in design.bottom_bars(span))
+    counted, layers = design.bottom_counted(span), design.bottom_bars(span)
+    area = sum(layer.area for layer in layers) if of_one_size(layers) else None
     return _in_part(design, counted, area, (key, f"Span {span}: bottom bars", span))
 
 
@@ -117,15 +115,19 @@ def _top_in_part(design: Design, face: Face, top: TopBars) -> dict[str, Entry]:
     if not design.given:
         return {}
     title = f"{face.name.capitalize()}: top bars"
-    return _in_part(design, design.top_counted(face), top.area, (face.key, title, face.span))
+    area = top.area if top.of_one_size else None
+    return _in_part(design, design.top_counted(face), area, (face.key, title, face.span))
 
 
 def _in_part(
-    design: Design, counted: Sequence[Developed], area: float, section: tuple[str, str, int]
+    design: Design, counted: Sequence[Developed], area: float | None, section: tuple[str, str, int]
 ) -> dict[str, Entry]:
-    """Record bars that count otherwise than in full; ``section`` has key, title and span."""
+    """Record bars that count otherwise than in full, or of several sizes side by side.
+
+    ``area`` is that of the section, if its bars have one size; ``section`` has key, title and span.
+    """
     key, title, span = section
-    if abs(area_of(counted) - area) <= _SAME * area:
+    if area is not None and abs(area_of(counted) - area) <= _SAME * area:
         return {}
     return record_developed_bars(
         design.model, design.designed, counted, key=developed_key(key),
@@ -264,9 +266,8 @@ def _record_face(
         waivable=True,
     )  # fmt: skip
     if inputs.slab:
-        steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
-        steps.check(minimum.SPREAD)
-    cracks_inside(steps, inputs.exposure, (top.web,), TENSION_AREAS[inputs.shape])
+        _check_spread(steps, top)
+    cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape])
     _take(steps, _SHARED)
     made = dict(sheet.part_entries) | dict(counts)
     return {name: made[name] for name in _SHARED if name in made}
@@ -283,21 +284,34 @@ def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:
 def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> None:
     sheet, inputs = model.sheet, model.inputs
     origin = _origin(inputs, inputs.top_bars[face.support - 1])
-    sheet.note("bars-text", f"Top bars: {top}, {origin}.", title="Bars")
+    beside = "" if top.web.thinner is None else f" {TWO_SIZES}"
+    sheet.note("bars-text", f"Top bars: {top}, {origin}.{beside}", title="Bars")
     entries = {
         "d_bs": sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b"),
         "r_s": sheet.lookup("r_s", bars.STIRRUP_BENDS, inputs.stirrup),
         "d_b": sheet.lookup("d_b", bars.BARS, top.web.size),
         "A_b": sheet.lookup("A_b", bars.BARS, top.web.size),
-        "n_t": sheet.given("n_t", str(top.web.number), source=origin),
+        "n_t": sheet.given("n_t", str(top.web.count), source=origin),
     }
-    entries["n_b"] = for_distance(sheet, "n_b", top.web.number, entries["n_t"])
+    entries["n_b"] = for_distance(sheet, "n_b", top.web.count, entries["n_t"])
     if inputs.slab:
         entries["n_o"] = sheet.given("n_o", str(top.overhang), source=origin)
     steps.bind(**entries)
     steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
     steps.check(bars.FITS)
-    steps.lines(SPREAD_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
+    if top.of_one_size:  # else area and depth have a part of their own
+        steps.lines(SPREAD_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
+
+
+def _check_spread(steps: Steps, top: TopBars) -> None:
+    """Record that the overhang holds the top bars that it needs (10.5.3.1)."""
+    steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
+    if top.spread_size == top.web.size:
+        steps.check(minimum.SPREAD)
+        return
+    title = "area of one bar in the overhang"
+    A_b = steps.sheet.lookup("A_bo", bars.BARS, top.spread_size, "A_b", title=title)
+    steps.check(minimum.SPREAD, A_b=A_b)
 
 
 def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top: TopBars) -> None:
@@ -307,6 +321,5 @@ def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top
     steps.bind(**dict(worst))
     steps.check(flexure.STRENGTH)
     if model.inputs.slab:
-        steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
-        steps.check(minimum.SPREAD)
-    cracks_inside(steps, model.inputs.exposure, (top.web,), TENSION_AREAS[model.inputs.shape])
+        _check_spread(steps, top)
+    cracks_inside(steps, model.inputs.exposure, top.groups, TENSION_AREAS[model.inputs.shape])

@@ -4,12 +4,11 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping
 
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers, TopBars
 from lineproof.beams.choice import bars_for
 from lineproof.beams.continuous.bar_choice import (
     Chosen,
     Section,
-    TopBars,
     bottom_trial,
     choose,
     top_trial,
@@ -134,7 +133,7 @@ def choose_top(
                     (least or {}).get(support, 0.0),
                 )  # fmt: skip
             continue
-        faces = [top_checks(dict(at), rules, top.web, top.overhang, stirrup) for at in numbers]
+        faces = [top_checks(dict(at), rules, top, stirrup) for at in numbers]
         made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))
     numbered = {section.name: support for support, section in sections.items()}
     search = top_trial(rules, stirrup)

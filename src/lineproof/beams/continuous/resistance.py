@@ -15,7 +15,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from lineproof.beams.analysis.curves import Floats
-from lineproof.beams.bars import BarLayer, BarLayers
+from lineproof.beams.bars import BarLayer, BarLayers, layer_of
 from lineproof.beams.continuous.anchorage import bar_of, develop, hook_at, value
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
@@ -184,8 +184,9 @@ def effective_depth(designed: Designed, layers: BarLayers, h: float) -> float:
     total = moment = 0.0
     for number, layer in enumerate(layers):
         first = layers[0].diameter if number else 0.0
-        total += layer.area
-        moment += layer.area * (h - _distance(designed, layer.diameter, first))
+        for group in layer.groups:
+            total += group.area
+            moment += group.area * (h - _distance(designed, group.diameter, first))
     return moment / total
 
 
@@ -194,8 +195,8 @@ def top_layers(designed: Designed, support: int) -> BarLayers:
     top = designed.bars.top[support - 1]
     if not top.web:
         return (BarLayer(2, designed.bars.holders),)
-    first = top.web[0]
-    return (BarLayer(first.number + top.overhang, first.size), *top.web[1:])
+    first = layer_of([*top.web[0].groups, *top.spread])
+    return (first, *top.web[1:])
 
 
 def section_depth(designed: Designed, face: Face, span: int, support: int = 0) -> float:

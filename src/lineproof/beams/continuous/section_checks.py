@@ -6,10 +6,10 @@ shorter version of a formula.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
-from lineproof.beams.bars import BarLayer, BarLayers, spaced
+from lineproof.beams.bars import BarLayer, BarLayers, TopBars, of_one_size, spaced
 from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation, value
 from lineproof.beams.inputs import Shape
 from lineproof.formula import Formula
@@ -47,7 +47,36 @@ def _put_layer(at: Numbers, layer: BarLayer, stirrup: str) -> None:
     at["d_bs"] = BARS.number(stirrup, "d_b")
     at["r_s"] = bars.STIRRUP_BENDS.number(stirrup, "r_s")
     at["d_b"], at["A_b"] = layer.diameter, BARS.number(layer.size, "A_b")
-    at["n_b"] = at["n_1"] = float(layer.number)
+    at["n_b"] = at["n_1"] = float(layer.count)
+
+
+def _put_all(at: Numbers, groups: Iterable[tuple[float, float]]) -> None:
+    """Put the area of bars of several sizes or layers, and the depth to their centre.
+
+    ``groups`` gives area and depth of bars of one size in one layer.
+    """
+    kept = tuple(groups)
+    at["A_s"] = sum(A for A, _ in kept)
+    at["d"] = sum(A * d for A, d in kept) / at["A_s"]
+
+
+def _first_groups(at: Numbers, layer: BarLayer) -> list[tuple[float, float]]:
+    """Return area and depth of each size in a first layer."""
+    return [
+        (group.area, value(bars.DEPTH_ONE_LAYER, at | {"d_b": group.diameter}))
+        for group in layer.groups
+    ]
+
+
+def _second_groups(at: Numbers, first: BarLayer, layer: BarLayer) -> list[tuple[float, float]]:
+    """Return area and depth of each size in a second layer, over the first one."""
+    made = []
+    for group in layer.groups:
+        thicker = max(first.diameter, group.diameter)
+        s_l = value(bars.LAYER_DISTANCE, at | {"d_b": thicker})
+        d_2 = value(bars.DEPTH_SECOND, at | {"d_b2": group.diameter, "s_l": s_l})
+        made.append((group.area, d_2))
+    return made
 
 
 def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
@@ -55,8 +84,11 @@ def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
     first = layers[0]
     _put_layer(at, first, stirrup)
     put(at, bars.LEAST_CLEAR)
-    at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(first.number))})
+    at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(first.count))})
     made = {bars.FITS.key: utilisation(bars.FITS, at)}
+    if len(layers) == 1 and not of_one_size(layers):
+        _put_all(at, _first_groups(at, first))
+        return made
     if len(layers) == 1:
         put(at, bars.AREA_OF_BARS, bars.DEPTH_ONE_LAYER)
         return made
@@ -64,25 +96,33 @@ def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
     at["A_s1"] = value(bars.AREA_OF_BARS, at)
     put(at, bars.DEPTH_FIRST)
     at["d_b2"] = second.diameter
-    upper = at | {"d_b": second.diameter, "n_b": float(spaced(second.number))}
+    upper = at | {"d_b": second.diameter, "n_b": float(spaced(second.count))}
     at["s_min2"] = value(bars.LEAST_CLEAR, upper)
     at["s_c2"] = value(bars.CLEAR, upper)
     at["s_l"] = value(bars.LAYER_DISTANCE, at | {"d_b": max(first.diameter, second.diameter)})
     at["A_s2"] = second.area
     put(at, bars.DEPTH_SECOND, bars.TOTAL_AREA, bars.DEPTH_TWO_LAYERS)
+    if not of_one_size(layers):
+        _put_all(at, [*_first_groups(at, first), *_second_groups(at, first, second)])
     return made | {bars.FITS_SECOND.key: utilisation(bars.FITS_SECOND, at)}
 
 
-def put_top(at: Numbers, shape: Shape, web: BarLayer, overhang: int, stirrup: str) -> Checks:
-    """Put top bars into the numbers: those within the web and ``overhang`` in each overhang."""
+def put_top(at: Numbers, shape: Shape, top: TopBars, stirrup: str) -> Checks:
+    """Put top bars into the numbers, those within the web and those in the overhangs."""
+    web = top.web
     _put_layer(at, web, stirrup)
-    at["n_t"], at["n_o"] = float(web.number), float(overhang)
-    at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(web.number))})
-    put(at, bars.LEAST_CLEAR, SPREAD_AREAS[shape], bars.DEPTH_ONE_LAYER)
+    at["n_t"], at["n_o"] = float(web.count), float(top.overhang)
+    at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(web.count))})
+    put(at, bars.LEAST_CLEAR)
     made = {bars.FITS.key: utilisation(bars.FITS, at)}
+    if top.of_one_size:
+        put(at, SPREAD_AREAS[shape], bars.DEPTH_ONE_LAYER)
+    else:
+        _put_all(at, [row for group in top.groups for row in _first_groups(at, group)])
     if shape != "rectangular":
         put(at, minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
-        made[minimum.SPREAD.key] = utilisation(minimum.SPREAD, at)
+        A_b = BARS.number(top.spread_size, "A_b")
+        made[minimum.SPREAD.key] = utilisation(minimum.SPREAD, at | {"A_b": A_b})
     return made
 
 
@@ -138,19 +178,20 @@ def bottom_checks(at: Numbers, rules: Rules, layers: BarLayers, stirrup: str) ->
     return made | _cracks(at, crack_control.TENSION_AREA)
 
 
-def top_checks(at: Numbers, rules: Rules, web: BarLayer, overhang: int, stirrup: str) -> Checks:
+def top_checks(at: Numbers, rules: Rules, top: TopBars, stirrup: str) -> Checks:
     """Return every check of top bars at a section with the top in tension: the web compressed.
 
     ``at`` holds materials, geometry (b_w, h, l, and b_f, b_o, h_f where there is a slab), M_f and
     M_crn.
     """
-    made = put_top(at, rules.shape, web, overhang, stirrup)
+    made = put_top(at, rules.shape, top, stirrup)
     flange = at.pop("h_f", None)
     at["b"] = at["b_w"]
     made |= _strength(at)
     if flange is not None:
         at["h_f"] = flange
     made |= _minimum(at, rules, TENSION_WIDTHS[rules.shape], top=True)
+    at["A_b"] = max(BARS.number(group.size, "A_b") for group in top.groups)
     return made | _cracks(at, TENSION_AREAS[rules.shape])
 
 

@@ -13,7 +13,9 @@ from lineproof.beams.continuous.bearing import (
     record_hangers,
 )
 from lineproof.beams.continuous.case_forces import factor_text, record_forces
+from lineproof.beams.continuous.cutoff_sets import groups_of_layers
 from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.developed import bars_of, record_groups
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
 from lineproof.beams.continuous.faces import faces_of, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
@@ -26,7 +28,7 @@ from lineproof.beams.continuous.interface import (
 )
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
-from lineproof.beams.continuous.resistance import stand
+from lineproof.beams.continuous.resistance import effective_depth, stand, top_layers
 from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_sections import ShearSection
@@ -49,6 +51,8 @@ AT_GIRDER = (
     "its face."
 )
 _SAME = 1e-9
+DEPTH = "depth-"
+_WITH_DEPTHS = ("sag-", "hog-", DEPTH)
 THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
     "far as moment, shear and torsion together ask for, and the bars in the corners of the "
@@ -132,6 +136,7 @@ def _record_section(design: Design, section: ShearSection, more: Mapping[str, En
     model = design.model
     sheet, span = model.sheet, section.span
     support = span if section.end == "left" else span + 1
+    d = _depth_of_layers(design, section)
     with sheet.part(section.key, section.title):
         place = span_place(sheet, model.inputs, span)
         width = sheet.entries_of(GIVEN).get(f"b_s{support}")
@@ -139,7 +144,7 @@ def _record_section(design: Design, section: ShearSection, more: Mapping[str, En
         place |= {"b_w": sheet.entry(f"{GIVEN}/b_w"), **more}
         sheet.stand_for(place)
         steps = Steps(sheet, place)
-        steps.bind(d=_depth(design, steps, section))
+        steps.bind(d=_depth_of_bars(design, steps, section) if d is None else d)
         _record_bars(design, steps, section)
         x = record_place(steps, section)
         record_forces(steps, model, section.demand, section.end, x=x)
@@ -163,18 +168,45 @@ def _record_restraint(model: Model, section: ShearSection) -> None:
             steps.check(shear.RESTRAINT_STRENGTH, V_r=own["V_r"])
 
 
-def _depth(design: Design, steps: Steps, section: ShearSection) -> Entry:
-    """Return the recorded depth that the section was chosen by, or record it."""
-    sheet = steps.sheet
+def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:
+    """Return the depth of the section from the bars of a section of flexure.
+
+    It stands there already, or is recorded in a part of its own where several sizes or layers have
+    it; None for bars of one size alone.
+    """
+    sheet, designed, span = design.model.sheet, design.designed, section.span
     for part in sheet.parts:
-        known = part.entries.get("d") if part.key.startswith(("sag-", "hog-")) else None
-        if known is not None and abs(known.value - section.d) <= _SAME * section.d:
+        known = part.entries.get("d") if part.key.startswith(_WITH_DEPTHS) else None
+        if known is not None and _is_depth(known.value, section):
             return known
+    h = designed.outline.depths[span - 1]
+    below = (f"below span {span}", designed.bars.bottom[span - 1])
+    above = [(f"above support {j}", top_layers(designed, j)) for j in (span, span + 1)]
+    for where, layers in (below, *above):
+        groups = groups_of_layers(layers)
+        if len(groups) > 1 and _is_depth(effective_depth(designed, layers, h), section):
+            title = f"Span {span}: depth of the bars {where}"
+            with sheet.part(f"{DEPTH}{section.key}", title):
+                steps = Steps(sheet, span_place(sheet, design.model.inputs, span))
+                stirrup = designed.basis.stirrups.size
+                steps.bind(c_c=sheet.find("c_c"), d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
+                record_groups(steps, [(group, None) for group in groups], "the section")
+            return sheet.entries_of(f"{DEPTH}{section.key}")["d"]
+    return None
+
+
+def _is_depth(d: float, section: ShearSection) -> bool:
+    return abs(d - section.d) <= _SAME * section.d
+
+
+def _depth_of_bars(design: Design, steps: Steps, section: ShearSection) -> Entry:
+    """Record inside the open part the depth of bars of one size in one layer, and return it."""
+    sheet = steps.sheet
     sizes = {design.designed.bars.holders, *(run.size for run in design.runs)}
     for size in sorted(sizes):
         d_b = BARS.number(size, "d_b")
         at = (steps.entry(n).value for n in ("h", "c_c", "d_bs"))
-        if abs(bars.DEPTH_ONE_LAYER.function(*at, d_b) - section.d) <= _SAME * section.d:
+        if _is_depth(bars.DEPTH_ONE_LAYER.function(*at, d_b), section):
             bound = sheet.lookup("d_b", BARS, size)
             return steps.line(bars.DEPTH_ONE_LAYER, d_b=bound)
     msg = f"{section.key}: no bars lie at the depth {section.d!r}"
@@ -298,7 +330,7 @@ def _record_interfaces(design: Design) -> None:
     assert slab is not None  # asked for before  # noqa: S101
     sheet = model.sheet
     for span in design.bottom:
-        entries = sheet.entries_of(f"sag-{span}")
+        entries = sheet.entries_of(f"sag-{span}") | bars_of(sheet, f"sag-{span}")
         with sheet.part(f"interface-{span}", f"Span {span}: flange and web in sagging moment"):
             steps = _flange_steps(sheet, model, span)
             steps.bind(**{n: entries[n] for n in ("A_s", "C_f") if n in entries})
@@ -308,7 +340,7 @@ def _record_interfaces(design: Design) -> None:
         entries = sheet.entries_of(face.key)
         with sheet.part(f"interface-{face.key}", f"{face.name.capitalize()}: flange and web"):
             steps = _flange_steps(sheet, model, face.span)
-            steps.bind(**{n: entries[n] for n in ("n_o", "A_b")})
+            steps.bind(n_o=entries["n_o"], A_b=entries.get("A_bo", entries["A_b"]))
             record_interface_top(steps, slab, _to_inflection(model, face.support, face.side))
 
 

@@ -90,7 +90,7 @@ def _bars(entries: Mapping[str, Entry]) -> str:
     """Return the bars of a section as noted, without where they come from."""
     text = str(entries["bars-text"].source.text)
     head = text.partition(": ")[2]
-    for origin in (", chosen", ", given"):
+    for origin in (", chosen", ", given", ", as given"):
         head = head.partition(origin)[0]
     return head.rstrip(".")
 
@@ -105,7 +105,7 @@ def _hog(model: Model, face: Face) -> Row:
         case = f"restraint: {short_case(worst_load)}"
     else:
         case = short_case(model.forces.hog(face.support, face.side).case)
-    own = face if "A_s" in entries else _worst_face(model, face)
+    own = face if "bars-text" in entries else _worst_face(model, face)
     worst = model.sheet.entries_of(own.key) | bars_of(model.sheet, own.key)
     return _moment_row(name, case, entries, worst, _bars(worst))
 

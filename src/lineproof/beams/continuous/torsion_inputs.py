@@ -39,7 +39,8 @@ def span_torsion(model: Model, designed: Designed, span: int) -> SpanTorsion | N
 
 def corner_bar(designed: Designed, span: int) -> str:
     """Return the size of the thinnest bar in a corner of the stirrups of a span."""
-    sizes = [layer.size for layer in designed.bars.bottom[span - 1][:1]]
-    sizes += [designed.bars.holders]
-    sizes += [top.web[0].size for top in designed.bars.top[span - 1 : span + 1] if top.web]
+    layers = [*designed.bars.bottom[span - 1][:1]]
+    sizes = [designed.bars.holders]
+    layers += [top.web[0] for top in designed.bars.top[span - 1 : span + 1] if top.web]
+    sizes += [group.size for layer in layers for group in layer.groups]
     return min(sizes, key=lambda size: BARS.number(size, "d_b"))
