@@ -165,6 +165,11 @@ def read_one_layer(name: str, text: object) -> BarLayers:
 
 def _read_layer(name: str, text: object, group: str) -> BarLayer:
     match = _GROUP.match(group)
+    if "+" in group:
+        raise UserError(
+            f"{name}: {echo(text)} has two sizes in one layer; write one, such as '4-25M' (bars "
+            "along a beam, bar_runs, may have two)"
+        )
     if match is None:
         raise UserError(
             f"{name}: {echo(text)} is not understood; write '4-25M', or '4-25M / 2-25M' for "

@@ -155,3 +155,28 @@ def test_three_sizes_in_a_layer_are_refused_with_what_to_write() -> None:
         "bar runs: span 1: 25M, 20M, 15M stand in layer 1 of the bottom bars; write at most two "
         "sizes a layer, such as 25M and 15M"
     )
+
+
+@pytest.mark.parametrize(
+    ("changes", "fault"),
+    [
+        (
+            {"bar_runs": [row("bottom", "2-25M + 2-20M", -0.1, 14.5)]},
+            (
+                "bar run 1, bars: '2-25M + 2-20M' is not understood; write '2-25M', a row for each "
+                "size"
+            ),
+        ),
+        (
+            {"bar_runs": None, "bottom_bars": ["2-25M + 2-20M", None]},
+            (
+                "bottom_bars, span 1: '2-25M + 2-20M' has two sizes in one layer; write one, such as "
+                "'4-25M' (bars along a beam, bar_runs, may have two)"
+            ),
+        ),
+    ],
+)
+def test_two_sizes_typed_at_once_say_how_to_give_them(changes: dict[str, Any], fault: str) -> None:
+    with pytest.raises(UserError) as refused:
+        run(start(**(inputs_of(NOTEBOOK) | changes)), FLEXURE)
+    assert fault in refused.value.faults

@@ -82,7 +82,8 @@ def _read_row(name: str, row: Mapping[str, Any], outline: BeamOutline, pair: Cod
              for key in ("hook_start", "hook_end")]  # fmt: skip
     match = _BARS.match(str(row["bars"]))
     if match is None or match[2].upper() not in BARS.rows or int(match[1]) < 1:
-        faults.add(f"{name}, bars: {echo(row['bars'])} is not understood; write '2-25M'")
+        again = ", a row for each size" if "+" in str(row["bars"]) else ""
+        faults.add(f"{name}, bars: {echo(row['bars'])} is not understood; write '2-25M'{again}")
     ends = [_distance(f"{name}, {key}", row[key], faults) for key in ("start", "end")]
     faults.raise_if_any()
     assert match is not None  # noqa: S101 - refused above
