@@ -170,8 +170,8 @@ def test_three_sizes_in_a_layer_are_refused_with_what_to_write() -> None:
         (
             {"bar_runs": None, "bottom_bars": ["2-25M + 2-20M", None]},
             (
-                "bottom_bars, span 1: '2-25M + 2-20M' has two sizes in one layer; write one, such as "
-                "'4-25M' (bars along a beam, bar_runs, may have two)"
+                "bottom_bars, span 1: '2-25M + 2-20M' has two sizes in one layer; write one, such "
+                "as '4-25M' (bars along a beam, bar_runs, may have two)"
             ),
         ),
     ],
