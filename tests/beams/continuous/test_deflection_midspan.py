@@ -151,7 +151,7 @@ def test_a_span_that_needs_no_calculation_records_no_bars() -> None:
 
 def _standing(start: float, end: float, *laps: str, number: int = 2) -> Standing:
     run = BarRun("top", 1, number, "20M", start, end)
-    return Standing(run, 600.0, 600.0, 51.0, "start" in laps, "end" in laps)
+    return Standing(run, 600.0, 600.0, 51.0, *("start" in laps, "end" in laps) * 2)
 
 
 def test_bars_count_by_their_development_to_both_sides() -> None:

@@ -40,6 +40,25 @@ def test_lapped_bars_count_as_one_all_along(more: float) -> None:
     ]
 
 
+def test_bars_lapped_too_little_count_as_far_as_each_is_developed() -> None:
+    """2-25M over 300 of 996.7 mm: at the begin of the lap 300/996.7 = 0.30 of the first.
+
+    249.2 mm, a quarter, from either end: 50.8/996.7 = 0.05 of each, together 100 mm2 of 1000.
+    """
+    four = (BarLayer(4, "25M"),)
+    bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
+    designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
+    runs = [
+        BarRun("bottom", 1, 2, "25M", -150.0, 3300.0),
+        BarRun("bottom", 1, 2, "25M", 3000.0, 7150.0),
+    ]
+    found = bars_over(designed, stand(designed, runs), "bottom", 1)
+    quarter = 1.3 * 0.45 * 400 / 35**0.5 * 25.2 / 4
+    areas = {(round(over.start), round(over.end)): over.area for over in found}
+    assert areas[round(3300 - 2 * quarter), 3000] == pytest.approx(300.0)
+    assert areas[round(3300 - quarter), round(3000 + quarter)] == pytest.approx(100.0)
+
+
 def test_an_assumed_restraint_adds_its_moment_over_the_span() -> None:
     """Girders at the ends: w l^2/24 over l, on the outer sides of the end spans alone.
 

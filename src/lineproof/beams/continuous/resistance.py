@@ -28,11 +28,16 @@ MOST_LAP = 100.0
 """Longest overlap of like bars that is a lap, in bar diameters: more are two sets of bars."""
 
 
+WHOLE = 1 - 1e-9
+"""Part of the lap needed from which an overlap is a whole lap, but for round-off."""
+
+
 @dataclass(frozen=True, slots=True)
 class Standing:
     """A run with what its resistance needs: lengths over which its stress rises, at either end.
 
-    ``distance`` is that of the bar centres from the face of the bars.
+    ``distance`` is that of the bar centres from the face of the bars. ``whole_start`` and
+    ``whole_end`` tell of laps that are long enough, over which two bars together reach yield.
     """
 
     run: BarRun
@@ -41,6 +46,8 @@ class Standing:
     distance: float
     lap_start: bool
     lap_end: bool
+    whole_start: bool
+    whole_end: bool
 
     def developed(self, x: Floats) -> Floats:
         """Return the part of the yield strength that the bars reach at the stations x."""
@@ -174,6 +181,8 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
                 hook_at(designed, 1, run.size).l_dh if run.hook_start else rise_start,
                 hook_at(designed, last, run.size).l_dh if run.hook_end else rise_end,
                 distance_of(designed, run), lap_start, lap_end,
+                lap_start and starts[index] >= bar.lap * WHOLE,
+                lap_end and ends[index] >= bar.lap * WHOLE,
             )
         )  # fmt: skip
     return tuple(made)

@@ -1,7 +1,8 @@
 """Between bars along the beam and shear: which bars count where, and what stirrups resist where.
 
 A bar counts as far as it is developed (11.3.6.4): over a stretch, with the least part that it
-reaches there. Two lapped bars count as one, which changes over at the middle of the lap.
+reaches there. Two lapped bars count as one, which changes over at the middle of the lap; where the
+lap is too short, each counts as far as it is developed by itself.
 """
 
 from __future__ import annotations
@@ -117,8 +118,8 @@ def _marks(bars: Standing) -> Iterator[float]:
     """Give the places at which the part of a run that counts begins to change, and between."""
     run = bars.run
     for end, rise, lap, inward in (
-        (run.start, bars.rise_start, bars.lap_start, 1),
-        (run.end, bars.rise_end, bars.lap_end, -1),
+        (run.start, bars.rise_start, bars.whole_start, 1),
+        (run.end, bars.rise_end, bars.whole_end, -1),
     ):
         steps = (0.5,) if lap else (0.0, 0.25, 0.5, 0.75, 1.0)
         yield from (end + inward * rise * step for step in steps)
@@ -129,8 +130,8 @@ def _share(bars: Standing, places: Sequence[float]) -> Share:
     found = Share(bars.run, 1.0)
     for x in places:
         sides = (
-            (x - bars.run.start, bars.rise_start, bars.lap_start),
-            (bars.run.end - x, bars.rise_end, bars.lap_end),
+            (x - bars.run.start, bars.rise_start, bars.whole_start),
+            (bars.run.end - x, bars.rise_end, bars.whole_end),
         )
         for length, rise, lap in sides:
             part = _down(min(max(length / rise, 0.0), 1.0), PRINTED_PART)
