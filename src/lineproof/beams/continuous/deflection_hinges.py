@@ -1,7 +1,8 @@
 """Places at which service moments crack a section in which no bars stand: hinges.
 
 A span with one has no stiffness there and is given no deflection. The moments of the spans
-continuous with it were found without the hinge, so that these are given none either.
+continuous with it were found without the hinge, so that these are given none either. The loads
+that deflect another span most are looked at too: they may crack this one, and it bends that one.
 """
 
 from __future__ import annotations
@@ -69,15 +70,18 @@ class Hinge:
         return self.words == _CONSTRUCTION
 
 
-def hinge_of(design: Design, service: ServiceMoments) -> Hinge | None:
-    """Return where a span cracks without bars under service load; None where it does not."""
-    model, span = design.model, service.span
+def hinge_of(design: Design, span: int, services: Mapping[int, ServiceMoments]) -> Hinge | None:
+    """Return where a span cracks without bars under service load; None where it does not.
+
+    ``services`` are those of all spans, each with live load where it deflects its span most.
+    """
+    model = design.model
     x, at = _places(design, span)
     solution = model.forces.solution
     moments = solution.span(span).moment(x)
     bare = {face: _bare(design, span, face, at) for face in FACES}
     limits = cracking_moments(model, span)
-    for words, factors in _stages(model, service):
+    for words, factors in _stages(model, span, services):
         M = np.array([factors.get(row, 0.0) for row in solution.rows]) @ moments
         for face, sign in zip(FACES, (1.0, -1.0), strict=True):
             acting = np.where(bare[face], sign * M, 0.0)
@@ -87,8 +91,11 @@ def hinge_of(design: Design, service: ServiceMoments) -> Hinge | None:
     return None
 
 
-def _stages(model: Model, service: ServiceMoments) -> Iterator[tuple[str, Mapping[Row, float]]]:
-    """Give name and load factors of every stage, that of construction first."""
+def _stages(
+    model: Model, span: int, services: Mapping[int, ServiceMoments]
+) -> Iterator[tuple[str, Mapping[Row, float]]]:
+    """Give name and load factors of every stage, that of construction first, then its own."""
+    service = services[span]
     if model.inputs.construction_load is not None and not service.free:
         kind, w_cn = model.inputs.live_kind, model.sheet.entry(f"{LOADS}/w_cn").value
         spans = range(1, model.spans + 1)
@@ -100,6 +107,10 @@ def _stages(model: Model, service: ServiceMoments) -> Iterator[tuple[str, Mappin
             },
         )
     yield from ((WORDS[stage], factors) for stage, factors in service.factors.items())
+    for number, beside in services.items():
+        for stage, factors in beside.factors.items():
+            if number != span:
+                yield f"{WORDS[stage]}, live load as for span {number}", factors
 
 
 def _places(design: Design, span: int) -> tuple[Floats, Floats]:

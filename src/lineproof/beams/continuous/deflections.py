@@ -75,7 +75,7 @@ def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
     model = design.model
     r_Ls = _record_share(model)
     services = {span: service_of(model, span) for span in range(1, model.spans + 1)}
-    found = {span: hinge_of(design, service) for span, service in services.items()}
+    found = {span: hinge_of(design, span, services) for span in services}
     hinges = {span: hinge for span, hinge in found.items() if hinge is not None}
     beside = continuous_with(model, tuple(hinges))
     made = {span: _record_hinge(design, hinge) for span, hinge in hinges.items()}
