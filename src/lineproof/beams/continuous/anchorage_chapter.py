@@ -8,7 +8,7 @@ from lineproof.beams.continuous.anchorage_record import Writers, record_stretch
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.detailing_data import ShearStretch
-from lineproof.beams.continuous.detailing_record import record_detailing
+from lineproof.beams.continuous.detailing_record import record_detailing, record_lengths_and_ends
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.torsion_face import record_torsion_at_face
@@ -19,6 +19,18 @@ from lineproof.record import Entry
 
 def record_anchorage(design: Design) -> None:
     """Record development, hooks, cut-off points, laps and coverage of the bars as laid."""
+    coverage = record_detailing(_writers(design), design.runs)
+    if not coverage.holds and not design.model.inputs.bars_given:  # bars given fail their checks
+        raise UserError([f"bars: {gap}" for gap in coverage.gaps])
+
+
+def record_ends(design: Design) -> None:
+    """Record development, hooks, cut-off points and laps alone, not the coverage."""
+    record_lengths_and_ends(_writers(design), design.runs)
+
+
+def _writers(design: Design) -> Writers:
+    """Return what the detailing is recorded by: spans, forces, shear, torsion."""
     model = design.model
 
     def span(number: int) -> Mapping[str, Entry]:
@@ -30,12 +42,7 @@ def record_anchorage(design: Design) -> None:
     def torsion(steps: Steps, demand: Demand, near: End) -> None:
         record_torsion_at_face(design, steps, demand, near)
 
-    writers = Writers(
-        model.sheet, design.designed, span, forces, _record_shear, torsion=torsion
-    )  # fmt: skip
-    coverage = record_detailing(writers, design.runs)
-    if not coverage.holds and not model.inputs.bars_given:  # bars given fail their checks
-        raise UserError([f"bars: {gap}" for gap in coverage.gaps])
+    return Writers(model.sheet, design.designed, span, forces, _record_shear, torsion=torsion)
 
 
 def _record_shear(steps: Steps, stretch: ShearStretch) -> None:

@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from typing import Any
 
 from lineproof.beams import basics
 from lineproof.beams.continuous import faces, flexure, interface
 from lineproof.beams.continuous import loads as load_take_down
-from lineproof.beams.continuous.anchorage_chapter import record_anchorage
+from lineproof.beams.continuous.anchorage_chapter import record_anchorage, record_ends
 from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
 from lineproof.beams.continuous.cures_flow import Found, record_cures
@@ -103,13 +103,16 @@ class ContinuousBeam:
         _, design, cures = self._last
         return replace(design, model=self.model), cures
 
-    def _with_bars(self, runs: Runs) -> Failing:
-        """Return the checks that fail with other bars along the beam; the sheet stays as it is."""
+    def _with_bars(self, runs: Runs) -> Iterator[Failing]:
+        """Give the checks that fail with other bars along the beam, after every chapter.
+
+        The sheet stays as it is. The cover by bars is not asked for.
+        """
         inputs = replace(self.inputs, bar_runs=tuple(row_of(run) for run in runs))
         beam = ContinuousBeam(Trial(self.sheet), inputs, self.pair, cures=False)
-        for call in (beam.flexure, beam.shear, beam.deflections, beam.anchorage):
+        for call in (beam.flexure, beam.shear, beam.deflections, beam._ends):
             call()
-        return failing_of(beam.sheet.parts)
+            yield failing_of(beam.sheet.parts)
 
     def _cure(self, part: Part) -> None:
         """Record in a part that is about to close what would cure the checks that fail in it."""
@@ -176,6 +179,11 @@ class ContinuousBeam:
         self.sheet.need(*_BEFORE_DESIGN, FLEXURE_CALL)
         with self.sheet.chapter(ANCHORAGE_CALL, closing=self._cure):
             record_anchorage(self.design)
+
+    def _ends(self) -> None:
+        """Record the chapter of the anchorage without the cover of all moments by bars."""
+        with self.sheet.chapter(ANCHORAGE_CALL):
+            record_ends(self.design)
 
     def schedule(self) -> None:
         """Record bar schedule, bends, stirrup schedule and quantities."""

@@ -7,7 +7,7 @@ the bars must lap, fit and be what may be given.
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Iterator, Mapping
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -27,7 +27,7 @@ from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_given import bottom_places, fit, section_bars_of
 from lineproof.beams.continuous.laps import bad_laps
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import provide, stand
+from lineproof.beams.continuous.resistance import Standing, provide, stand
 from lineproof.beams.continuous.resistance_cover import (
     COUNT,
     ROUND_OFF,
@@ -38,7 +38,7 @@ from lineproof.beams.continuous.resistance_cover import (
     worst_of,
     yield_force,
 )
-from lineproof.beams.continuous.resistance_demand import NOTHING, SpanDemand, demand_of
+from lineproof.beams.continuous.resistance_demand import NOTHING, SpanDemand, demand_at, demand_of
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import flexure
@@ -89,7 +89,8 @@ class _Trial:
     """A gap whose beam is covered again with other bars or other loads.
 
     ``demands`` are those of all spans, that of the gap first. ``bad`` tells which of their
-    stations belong to other gaps, which may stay; ``laps`` are those that fail already.
+    stations belong to other gaps, which may stay; ``laps`` are those that fail already; ``places``
+    are those of the sections of the spans.
     """
 
     designed: Designed
@@ -98,6 +99,7 @@ class _Trial:
     demands: tuple[SpanDemand, ...]
     bad: tuple[np.ndarray, ...]
     laps: frozenset[tuple[int, int]]
+    places: tuple[float, ...]
     tried: Tried
 
     @classmethod
@@ -106,8 +108,10 @@ class _Trial:
         spans = range(1, len(designed.outline.lengths) + 1)
         order = sorted(spans, key=lambda span: span != gap.span)
         demands = tuple(demand_of(designed, span, COUNT) for span in order)
-        bad = tuple(_bad(designed, runs, gap, demand) for demand in demands)
-        return cls(designed, runs, gap, demands, bad, bad_laps(designed, runs), tried)
+        standing = stand(designed, runs)
+        bad = tuple(_bad(designed, standing, gap, demand) for demand in demands)
+        places = tuple(bottom_places(designed.outline, designed.forces))
+        return cls(designed, runs, gap, demands, bad, bad_laps(designed, runs), places, tried)
 
     def use(self, runs: Runs) -> float:
         """Return the largest ratio of the beam with other bars, other gaps left aside.
@@ -115,50 +119,55 @@ class _Trial:
         Infinite where they cannot be given so, or are lapped too little. The bars of the beam keep
         their places among them.
         """
-        if not _may_be_given(self.designed, runs) or bad_laps(self.designed, runs) - self.laps:
-            return np.inf
-        largest = 0.0
+        standing, largest = stand(self.designed, runs), 0.0
         for demand, bad in zip(self.demands, self.bad, strict=True):
-            made = _ratios(self.designed, runs, self.gap, demand)
+            made = _ratios(self.designed, standing, self.gap, demand)
             largest = max(largest, float(np.where(bad, 0.0, made).max()))
             if not find.holds(largest):
-                break
-        return largest
+                return largest
+        lapped = not bad_laps(self.designed, runs) - self.laps
+        return largest if lapped and self.may_be_given(runs) else np.inf
+
+    def may_be_given(self, runs: Runs) -> bool:
+        """Tell whether bars fit into the web, and stand at the sections as they may be given."""
+        if not fit(runs, self.designed.basis):
+            return False
+        try:
+            section_bars_of(runs, self.designed.outline, self.designed.bars.holders, self.places)
+        except UserError:
+            return False
+        return True
 
     def stands(self, runs: Runs) -> bool:
         """Tell whether other bars close the gap and no check fails that does not fail now."""
         return find.holds(self.use(runs)) and self.tried.fails_no_more(runs, self.runs)
 
     def with_loads(self, part: float) -> float:
-        """Return that of the span of the gap with a part of all factored loads."""
+        """Return that of the gap with a part of all factored loads.
+
+        Elsewhere nothing is asked that smaller loads would not ask less of.
+        """
         forces = replace(self.designed.forces, factors=self.designed.forces.factors * part)
         designed = replace(self.designed, forces=forces)
-        demand = demand_of(designed, self.gap.span, COUNT)
-        made = _ratios(designed, self.runs, self.gap, demand)
-        return float(np.where(self.bad[0], 0.0, made).max())
+        now, gap = self.demands[0], self.gap
+        inside = now.local[(now.x >= gap.start) & (now.x <= gap.end)]
+        demand = demand_at(designed, gap.span, inside)
+        return float(_ratios(designed, stand(designed, self.runs), gap, demand).max())
 
 
-def _bad(designed: Designed, runs: Runs, gap: Gap, demand: SpanDemand) -> np.ndarray:
-    now = _ratios(designed, runs, gap, demand) > 1 + ROUND_OFF
+def _bad(
+    designed: Designed, standing: Sequence[Standing], gap: Gap, demand: SpanDemand
+) -> np.ndarray:
+    now = _ratios(designed, standing, gap, demand) > 1 + ROUND_OFF
     inside = (demand.x >= gap.start) & (demand.x <= gap.end)
     return now & ~(inside & (demand.span == gap.span))
 
 
-def _may_be_given(designed: Designed, runs: Runs) -> bool:
-    """Tell whether bars fit into the web, and stand at the sections as they may be given."""
-    if not fit(runs, designed.basis):
-        return False
-    try:
-        places = bottom_places(designed.outline, designed.forces)
-        section_bars_of(runs, designed.outline, designed.bars.holders, places)
-    except UserError:
-        return False
-    return True
-
-
-def _ratios(designed: Designed, runs: Runs, gap: Gap, demand: SpanDemand) -> np.ndarray:
+def _ratios(
+    designed: Designed, standing: Sequence[Standing], gap: Gap, demand: SpanDemand
+) -> np.ndarray:
     spans = np.full(len(demand.x), demand.span)
-    provided = provide(designed, stand(designed, runs), gap.face, demand.x, spans)
+    provided = provide(designed, standing, gap.face, demand.x, spans)
     return ratios(demand.side(gap.face), provided, yield_force(designed))
 
 

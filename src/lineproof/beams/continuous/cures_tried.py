@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass, field
 from typing import Any
 
@@ -52,25 +52,29 @@ def row_of(run: BarRun) -> dict[str, Any]:
 class Tried:
     """A beam calculated with other bars along it, once for the same bars.
 
-    ``calculate`` returns what fails with bars along the beam and raises :class:`UserError` where
-    they are refused.
+    ``calculate`` gives, after every chapter, what fails so far with bars along the beam; it raises
+    :class:`UserError` where they are refused.
     """
 
-    calculate: Callable[[Runs], Failing]
-    made: dict[Runs, Failing | None] = field(default_factory=dict)
+    calculate: Callable[[Runs], Iterator[Failing]]
+    failed: dict[Runs, Failing] = field(default_factory=dict)
+    made: dict[tuple[Runs, Runs], bool] = field(default_factory=dict)
 
     def fails_no_more(self, runs: Runs, before: Runs) -> bool:
         """Tell whether bars are taken, and no check fails with them that holds with those before.
 
-        The cover by bars is left aside.
+        The cover by bars is left aside. Nothing is calculated behind the first chapter that fails.
         """
-        now, then = self._failing(runs), self._failing(before)
-        return now is not None and then is not None and now <= then
-
-    def _failing(self, runs: Runs) -> Failing | None:
-        if runs not in self.made:
+        if (runs, before) not in self.made:
             try:
-                self.made[runs] = self.calculate(runs)
+                then = self._failing(before)
+                self.made[runs, before] = all(now <= then for now in self.calculate(runs))
             except UserError:
-                self.made[runs] = None
-        return self.made[runs]
+                self.made[runs, before] = False
+        return self.made[runs, before]
+
+    def _failing(self, runs: Runs) -> Failing:
+        """Return what fails with bars in all chapters."""
+        if runs not in self.failed:
+            *_, self.failed[runs] = self.calculate(runs)
+        return self.failed[runs]

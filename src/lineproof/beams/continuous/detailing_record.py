@@ -39,6 +39,15 @@ def record_detailing(writers: Writers, runs: Runs, count: int = COUNT) -> Covera
     :class:`UserError` for hooks in an edition in which they cannot be calculated, and where no
     bars count at all though a moment asks for them.
     """
+    writers, lengths, hooked = record_lengths_and_ends(writers, runs)
+    return record_coverage(writers, lengths, hooked, runs, count)
+
+
+def record_lengths_and_ends(writers: Writers, runs: Runs) -> tuple[Writers, Lengths, Hooks]:
+    """Record development, hooks, cut-off points, bars into supports and laps, no coverage.
+
+    Returns what the coverage is recorded with. Raises :class:`UserError` as above.
+    """
     designed = writers.designed
     frame = Frame.of(designed)
     lengths = record_lengths(writers, runs)
@@ -50,7 +59,7 @@ def record_detailing(writers: Writers, runs: Runs, count: int = COUNT) -> Covera
         if designed.bars.top[support - 1].web:
             _record_top(writers, frame, lengths, runs, support)
     record_laps(writers, lengths, runs)
-    return record_coverage(writers, lengths, hooked, runs, count)
+    return writers, lengths, hooked
 
 
 def _record_bottom(

@@ -153,6 +153,7 @@ def _inside(x: Floats, start: float, end: float) -> list[float]:
     return found
 
 
+@lru_cache(maxsize=24)
 def demand_of(designed: Designed, span: int, count: int) -> SpanDemand:
     """Return moment and tension of both faces along a span; inside supports, those of the face."""
     local = stations(designed, span, count)
