@@ -14,6 +14,7 @@ from lineproof.beams.continuous.coefficients import record_coefficients
 from lineproof.beams.continuous.cover import record_cover
 from lineproof.beams.continuous.cures_flow import Found, record_cures
 from lineproof.beams.continuous.cures_tried import (
+    Calculated,
     Failing,
     Runs,
     Tried,
@@ -39,6 +40,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
+from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.beams.continuous.resistance_station import COVERAGE
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
@@ -103,16 +105,18 @@ class ContinuousBeam:
         _, design, cures = self._last
         return replace(design, model=self.model), cures
 
-    def _with_bars(self, runs: Runs) -> Iterator[Failing]:
-        """Give the checks that fail with other bars along the beam, after every chapter.
-
-        The sheet stays as it is. The cover by bars is not asked for.
-        """
+    def _with_bars(self, runs: Runs) -> Calculated:
+        """Return the beam calculated with other bars along it; the sheet stays as it is."""
         inputs = replace(self.inputs, bar_runs=tuple(row_of(run) for run in runs))
         beam = ContinuousBeam(Trial(self.sheet), inputs, self.pair, cures=False)
-        for call in (beam.flexure, beam.shear, beam.deflections, beam._ends):
+        design = beam.design
+        return Calculated(covered(design.designed, design.runs).gaps, beam._chapters())
+
+    def _chapters(self) -> Iterator[Failing]:
+        """Give the checks that fail after every chapter; the cover by bars is not recorded."""
+        for call in (self.flexure, self.shear, self.deflections, self._ends):
             call()
-            yield failing_of(beam.sheet.parts)
+            yield failing_of(self.sheet.parts)
 
     def _cure(self, part: Part) -> None:
         """Record in a part that is about to close what would cure the checks that fail in it."""

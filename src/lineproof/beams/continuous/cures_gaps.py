@@ -53,7 +53,7 @@ _FARTHER = (0.0, 250.0, 500.0)
 """How much farther than a gap asks for bars are tried, where they may not end so near [mm]."""
 _UP_TO = f"(up to {_MOST_BARS} of one size there, where the web takes them)"
 NO_FURTHER = f"no further bars {_UP_TO}"
-_NOTHING_ELSE = "without another check failing"
+_NOTHING_ELSE = "without this or another check failing"
 _NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
 
 
@@ -78,7 +78,8 @@ def _around(found: Coverage, face: Face, *, tension: bool) -> Gap | None:
 def gap_cures(design: Design, gap: Gap, tried: Tried) -> list[Cure]:
     """Return what would close a gap, each verified by covering the beam again.
 
-    Bars are verified by the whole calculation too: no check fails with them that holds now.
+    Bars are verified by the whole calculation too: the gap is closed with the shear that the beam
+    has with them, and no check fails that holds now.
     """
     trial = _Trial.of(design, gap, tried)
     return [*_longer(trial), _further(trial), _smaller(trial)]
@@ -140,7 +141,7 @@ class _Trial:
 
     def stands(self, runs: Runs) -> bool:
         """Tell whether other bars close the gap and no check fails that does not fail now."""
-        return find.holds(self.use(runs)) and self.tried.fails_no_more(runs, self.runs)
+        return find.holds(self.use(runs)) and self.tried.closes(runs, self.runs, self.gap)
 
     def with_loads(self, part: float) -> float:
         """Return that of the gap with a part of all factored loads.
@@ -238,10 +239,20 @@ def _grown(run: BarRun, before: float, after: float) -> BarRun:
 def _place(run: BarRun, ending: Runs, starting: Runs) -> str:
     """Say where bars end or begin, or both, as the bars along the beam are given."""
     if ending and starting:
-        return f"stand from {run.start / 1e3:.2f} to {run.end / 1e3:.2f} m {FROM}"
+        return f"stand from {metres(run.start)} to {metres(run.end)} m {FROM}"
     if ending:
-        return f"end {run.end / 1e3:.2f} m {FROM}"
-    return f"begin {run.start / 1e3:.2f} m {FROM}"
+        return f"end {metres(run.end)} m {FROM}"
+    return f"begin {metres(run.start)} m {FROM}"
+
+
+def metres(x: float) -> str:
+    """Write a place [mm] in m, with all its digits, two at least: it is to be typed back.
+
+    >>> metres(18813.0), metres(3150.0), metres(-100.0)
+    ('18.813', '3.15', '-0.10')
+    """
+    whole, digits = f"{x / 1e3:.6f}".split(".")
+    return f"{whole}.{digits.rstrip('0').ljust(2, '0')}"
 
 
 def _further(trial: _Trial) -> Cure:
@@ -266,13 +277,15 @@ def _of_size(trial: _Trial, size: str) -> Cure | None:
         made = _number_of(trial, replace(bar, start=start, end=end))
         if made is None and index == 0:
             return None
-        if made is not None and trial.stands((*trial.runs, made)):
-            layer = "" if made.layer == 1 else ", in a second layer"
-            text = (
-                f"further bars {made.number}-{size} from {start / 1e3:.2f} to {end / 1e3:.2f} m "
-                f"{FROM}{layer}"
-            )
-            return Cure("number", made.number, text, trial.use((*trial.runs, made)))
+        more = () if made is None else (made, replace(made, number=made.number + 1))
+        for bars in more:
+            if trial.stands((*trial.runs, bars)):
+                layer = "" if bars.layer == 1 else ", in a second layer"
+                text = (
+                    f"further bars {bars.number}-{size} from {metres(start)} to {metres(end)} m "
+                    f"{FROM}{layer}"
+                )
+                return Cure("number", bars.number, text, trial.use((*trial.runs, bars)))
     return Cure("number", None, f"none of the further bars tried {_UP_TO} {_NOTHING_ELSE}")
 
 

@@ -8,6 +8,7 @@ from typing import Any
 
 from lineproof.beams.continuous.deflection_service import DEFLECTION
 from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance_cover import Gap
 from lineproof.beams.continuous.resistance_station import COVERAGE
 from lineproof.errors import UserError
 from lineproof.record import Entry, Part
@@ -49,32 +50,48 @@ def row_of(run: BarRun) -> dict[str, Any]:
 
 
 @dataclass(frozen=True, eq=False, slots=True)
+class Calculated:
+    """A beam calculated with other bars along it: its gaps, and after every chapter what fails."""
+
+    gaps: tuple[Gap, ...]
+    chapters: Iterator[Failing]
+
+
+@dataclass(frozen=True, eq=False, slots=True)
 class Tried:
     """A beam calculated with other bars along it, once for the same bars.
 
-    ``calculate`` gives, after every chapter, what fails so far with bars along the beam; it raises
-    :class:`UserError` where they are refused.
+    ``calculate`` raises :class:`UserError` where they are refused.
     """
 
-    calculate: Callable[[Runs], Iterator[Failing]]
-    failed: dict[Runs, Failing] = field(default_factory=dict)
-    made: dict[tuple[Runs, Runs], bool] = field(default_factory=dict)
+    calculate: Callable[[Runs], Calculated]
+    now: dict[Runs, tuple[tuple[Gap, ...], Failing]] = field(default_factory=dict)
+    made: dict[tuple[Runs, Runs, Gap], bool] = field(default_factory=dict)
 
-    def fails_no_more(self, runs: Runs, before: Runs) -> bool:
-        """Tell whether bars are taken, and no check fails with them that holds with those before.
+    def closes(self, runs: Runs, before: Runs, gap: Gap) -> bool:
+        """Tell whether bars are taken and close a gap, no other gap grows, and no check fails more.
 
-        The cover by bars is left aside. Nothing is calculated behind the first chapter that fails.
+        The gaps are looked for anew: with other bars the shear leaves another tension in them.
+        ``before`` are the bars with the gap. Nothing is calculated behind what fails first.
         """
-        if (runs, before) not in self.made:
+        if (runs, before, gap) not in self.made:
             try:
-                then = self._failing(before)
-                self.made[runs, before] = all(now <= then for now in self.calculate(runs))
+                self.made[runs, before, gap] = self._closes(runs, before, gap)
             except UserError:
-                self.made[runs, before] = False
-        return self.made[runs, before]
+                self.made[runs, before, gap] = False
+        return self.made[runs, before, gap]
 
-    def _failing(self, runs: Runs) -> Failing:
-        """Return what fails with bars in all chapters."""
-        if runs not in self.failed:
-            *_, self.failed[runs] = self.calculate(runs)
-        return self.failed[runs]
+    def _closes(self, runs: Runs, before: Runs, gap: Gap) -> bool:
+        gaps, then = self._as_they_are(before)
+        others, now = [old for old in gaps if not old.covers(gap)], self.calculate(runs)
+        if not all(any(old.covers(new) for old in others) for new in now.gaps):
+            return False
+        return all(failing_so_far <= then for failing_so_far in now.chapters)
+
+    def _as_they_are(self, before: Runs) -> tuple[tuple[Gap, ...], Failing]:
+        """Return gaps and what fails with the bars of the beam, the cover by bars left aside."""
+        if before not in self.now:
+            found = self.calculate(before)
+            *_, last = found.chapters
+            self.now[before] = found.gaps, last
+        return self.now[before]

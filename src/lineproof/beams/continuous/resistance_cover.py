@@ -77,6 +77,11 @@ class Gap:
         same = (station.face, station.span) == (self.face, self.span)
         return same and self.start <= station.x <= self.end
 
+    def covers(self, other: Gap) -> bool:
+        """Tell whether another gap lies in it."""
+        same = (other.face, other.span) == (self.face, self.span)
+        return same and self.start <= other.start and other.end <= self.end
+
     @property
     def title(self) -> str:
         """Where it is, from the left axis of its span, as a check of it is called."""
