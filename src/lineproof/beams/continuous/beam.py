@@ -40,7 +40,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
-from lineproof.beams.continuous.resistance_cover import covered
+from lineproof.beams.continuous.resistance_cover import Gap, covered
 from lineproof.beams.continuous.resistance_station import COVERAGE
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
@@ -109,8 +109,12 @@ class ContinuousBeam:
         """Return the beam calculated with other bars along it; the sheet stays as it is."""
         inputs = replace(self.inputs, bar_runs=tuple(row_of(run) for run in runs))
         beam = ContinuousBeam(Trial(self.sheet), inputs, self.pair, cures=False)
-        design = beam.design
-        return Calculated(covered(design.designed, design.runs).gaps, beam._chapters())
+        return Calculated(beam._chapters(), beam._gaps)
+
+    def _gaps(self) -> tuple[Gap, ...]:
+        """Return the gaps in the bars along the beam."""
+        design = self.design
+        return covered(design.designed, design.runs).gaps
 
     def _chapters(self) -> Iterator[Failing]:
         """Give the checks that fail after every chapter; the cover by bars is not recorded."""

@@ -277,15 +277,13 @@ def _of_size(trial: _Trial, size: str) -> Cure | None:
         made = _number_of(trial, replace(bar, start=start, end=end))
         if made is None and index == 0:
             return None
-        more = () if made is None else (made, replace(made, number=made.number + 1))
-        for bars in more:
-            if trial.stands((*trial.runs, bars)):
-                layer = "" if bars.layer == 1 else ", in a second layer"
-                text = (
-                    f"further bars {bars.number}-{size} from {metres(start)} to {metres(end)} m "
-                    f"{FROM}{layer}"
-                )
-                return Cure("number", bars.number, text, trial.use((*trial.runs, bars)))
+        if made is not None and trial.stands((*trial.runs, made)):
+            layer = "" if made.layer == 1 else ", in a second layer"
+            text = (
+                f"further bars {made.number}-{size} from {metres(start)} to {metres(end)} m "
+                f"{FROM}{layer}"
+            )
+            return Cure("number", made.number, text, trial.use((*trial.runs, made)))
     return Cure("number", None, f"none of the further bars tried {_UP_TO} {_NOTHING_ELSE}")
 
 

@@ -51,10 +51,13 @@ def row_of(run: BarRun) -> dict[str, Any]:
 
 @dataclass(frozen=True, eq=False, slots=True)
 class Calculated:
-    """A beam calculated with other bars along it: its gaps, and after every chapter what fails."""
+    """A beam calculated with other bars along it: after every chapter what fails; its gaps.
 
-    gaps: tuple[Gap, ...]
+    Both are worked out as they are asked for.
+    """
+
     chapters: Iterator[Failing]
+    gaps: Callable[[], tuple[Gap, ...]]
 
 
 @dataclass(frozen=True, eq=False, slots=True)
@@ -84,14 +87,14 @@ class Tried:
     def _closes(self, runs: Runs, before: Runs, gap: Gap) -> bool:
         gaps, then = self._as_they_are(before)
         others, now = [old for old in gaps if not old.covers(gap)], self.calculate(runs)
-        if not all(any(old.covers(new) for old in others) for new in now.gaps):
+        if not all(failing_so_far <= then for failing_so_far in now.chapters):
             return False
-        return all(failing_so_far <= then for failing_so_far in now.chapters)
+        return all(any(old.covers(new) for old in others) for new in now.gaps())
 
     def _as_they_are(self, before: Runs) -> tuple[tuple[Gap, ...], Failing]:
         """Return gaps and what fails with the bars of the beam, the cover by bars left aside."""
         if before not in self.now:
             found = self.calculate(before)
             *_, last = found.chapters
-            self.now[before] = found.gaps, last
+            self.now[before] = found.gaps(), last
         return self.now[before]
