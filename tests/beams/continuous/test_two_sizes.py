@@ -135,6 +135,21 @@ def test_a_depth_that_no_section_has_is_recorded_for_the_shear() -> None:
     assert entries["d"].value == pytest.approx(d, rel=1e-12)
 
 
+def test_shear_goes_by_the_bars_that_stand_at_its_section() -> None:
+    """4-25M, and 2-20M above them beside the wall alone: the largest moment knows of one layer.
+
+    d = (2000*546.1 + 600*488.47)/2600 = 532.80 there, not 546.1: d_v = 0.9*532.80.
+    """
+    upper = row("bottom", "2-20M", -0.1, 2.4, layer=2)
+    made = beam([row("bottom", "4-25M", -0.1, 14.5), upper, *TOP, SPREAD])
+    assert recompute(made.close()) == []
+    d_2 = D_25 - 25.2 / 2 - 1.4 * 25.2 - 19.5 / 2
+    d = (2000 * D_25 + 600 * d_2) / 2600
+    assert made.entries_of("sag-1")["d"].value == pytest.approx(D_25, rel=1e-12)
+    assert made.entries_of("shear-1-left")["d_v"].value == pytest.approx(0.9 * d, rel=1e-12)
+    assert made.entries_of("depth-shear-1-left")["d"].value == pytest.approx(d, rel=1e-12)
+
+
 def test_what_is_too_little_in_two_sizes_fails() -> None:
     """2-20M + 2-15M, 1000 mm2, for a moment that asks for 1400."""
     weak = [

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
 from lineproof.beams.continuous.bars_counted import record_area
@@ -13,7 +13,8 @@ from lineproof.beams.continuous.bearing import (
     record_hangers,
 )
 from lineproof.beams.continuous.case_forces import factor_text, record_forces
-from lineproof.beams.continuous.cutoff_sets import groups_of_layers
+from lineproof.beams.continuous.cutoff_sets import Group as BarGroup
+from lineproof.beams.continuous.cutoff_sets import groups_met, groups_of_layers
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import bars_of, record_groups
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
@@ -32,7 +33,7 @@ from lineproof.beams.continuous.resistance import effective_depth, stand, top_la
 from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_sections import ShearSection
-from lineproof.beams.continuous.shear_stretches import Share, bars_over
+from lineproof.beams.continuous.shear_stretches import Share, bars_over, depth_over
 from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.continuous.torsion_inputs import corner_bar
@@ -179,20 +180,35 @@ def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:
         known = part.entries.get("d") if part.key.startswith(_WITH_DEPTHS) else None
         if known is not None and _is_depth(known.value, section):
             return known
+    for where, groups, d in _several(design, section):
+        if len(groups) < 2 or not _is_depth(d, section):  # noqa: PLR2004 - more than one
+            continue
+        with sheet.part(f"{DEPTH}{section.key}", f"Span {span}: depth of the bars {where}"):
+            steps = Steps(sheet, span_place(sheet, design.model.inputs, span))
+            stirrup = designed.basis.stirrups.size
+            steps.bind(c_c=sheet.find("c_c"), d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
+            record_groups(steps, [(group, None) for group in groups], "the section")
+        return sheet.entries_of(f"{DEPTH}{section.key}")["d"]
+    return None
+
+
+def _several(
+    design: Design, section: ShearSection
+) -> Iterator[tuple[str, Sequence[BarGroup], float]]:
+    """Give the bars whose depth a section of shear may have: where they lie, and their depth [mm].
+
+    They are those of the sections of flexure, and those that stand along the span.
+    """
+    designed, span, face = design.designed, section.span, section.tension
     h = designed.outline.depths[span - 1]
     below = (f"below span {span}", designed.bars.bottom[span - 1])
     above = [(f"above support {j}", top_layers(designed, j)) for j in (span, span + 1)]
     for where, layers in (below, *above):
-        groups = groups_of_layers(layers)
-        if len(groups) > 1 and _is_depth(effective_depth(designed, layers, h), section):
-            title = f"Span {span}: depth of the bars {where}"
-            with sheet.part(f"{DEPTH}{section.key}", title):
-                steps = Steps(sheet, span_place(sheet, design.model.inputs, span))
-                stirrup = designed.basis.stirrups.size
-                steps.bind(c_c=sheet.find("c_c"), d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
-                record_groups(steps, [(group, None) for group in groups], "the section")
-            return sheet.entries_of(f"{DEPTH}{section.key}")["d"]
-    return None
+        yield where, groups_of_layers(layers), effective_depth(designed, layers, h)
+    for over in bars_over(designed, stand(designed, design.runs), face, span):
+        if over.shares:
+            runs = (share.run for share in over.shares)
+            yield "that stand there", groups_met(designed, runs), depth_over(designed, span, over)
 
 
 def _is_depth(d: float, section: ShearSection) -> bool:

@@ -22,6 +22,7 @@ from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.resistance import (
     Standing,
     area_for,
+    distance_of,
     section_depth,
     shear_depth,
     stand,
@@ -150,7 +151,16 @@ def _stretches(
     for over in bars_over(designed, standing, face, span):
         near_left = over.start + over.end <= left + right
         d = section_depth(designed, face, span, span if near_left else span + 1)
+        if any(share.run.layer > 1 for share in over.shares):  # there the section may have one
+            d = min(d, depth_over(designed, span, over))
         yield Stretch(over.start - left, over.end - left, over.area, d)
+
+
+def depth_over(designed: Designed, span: int, over: BarsOver) -> float:
+    """Return the effective depth of the bars of a stretch, counted in full [mm]."""
+    h, runs = designed.outline.depths[span - 1], [share.run for share in over.shares]
+    moment = sum(run.area * (h - distance_of(designed, run)) for run in runs)
+    return moment / sum(run.area for run in runs)
 
 
 def _counted_between(designed: Designed, span: int) -> tuple[float, float]:
