@@ -54,10 +54,18 @@ class Steps:
         """Tell whether a comparison would hold here, without recording it."""
         return test.holds(*test.sides({name: self.entry(name).value for name in test.names}))
 
-    def check(self, test: Criterion, key: str = "", title: str = "", **bound: Entry) -> Entry:
-        """Record a check, under a title of its own if one is given."""
+    def check(
+        self,
+        test: Criterion,
+        key: str = "",
+        title: str = "",
+        *,
+        leads: bool = False,
+        **bound: Entry,
+    ) -> Entry:
+        """Record a check, under a title of its own if one is given; ``leads`` as on the sheet."""
         args = only(self.place | bound, test.names)
-        return self.sheet.check(test, key=key, title=title, **args)
+        return self.sheet.check(test, key=key, title=title, leads=leads, **args)
 
     def found(
         self,

@@ -73,8 +73,9 @@ class Calc:
 
     @property
     def failing(self) -> tuple[SummaryRow, ...]:
-        """The checks that do not hold."""
-        return tuple(row for row in self.summary if not row.holds)
+        """The checks that do not hold, first those that lead."""
+        failed = (row for row in self.summary if not row.holds)
+        return tuple(sorted(failed, key=lambda row: not row.leads))
 
     @property
     def part_summaries(self) -> tuple[PartSummary, ...]:

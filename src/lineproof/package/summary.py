@@ -34,6 +34,7 @@ class SummaryRow:
     holds: bool
     group: str
     utilisation: float | None = None
+    leads: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -51,13 +52,18 @@ class PartSummary:
 
 @dataclass(frozen=True, slots=True)
 class Failure:
-    """A check that does not hold, for the cover."""
+    """A check that does not hold, for the cover; ``place`` is the title of its part.
+
+    A check that ``leads`` stands before the others and says in its title where it is.
+    """
 
     anchor: str
     label: str
     title: str
     id: str
     accepted: bool
+    place: str = ""
+    leads: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -118,6 +124,7 @@ def summary_rows(
                 holds=printed.holds,
                 group=group,
                 utilisation=entry.get("utilisation"),
+                leads=bool(entry.get("leads")),
             )
         )
     return tuple(made)
@@ -156,20 +163,26 @@ def _named(tree: Tree, value: Math, notation: Notation) -> Math:
 
 
 def failures(record: Mapping[str, Any], rows: Rows, prefix: str) -> tuple[Failure, ...]:
-    """Return the checks that do not hold, accepted exceptions included."""
+    """Return the checks that do not hold, accepted exceptions included; first those that lead."""
     listed = dict.fromkeys(record["status"].get("failed", []))
     seen = {row_id: None for row_id, printed in rows.items() if not printed.holds}
-    return tuple(
-        Failure(
-            prefix + row_id,
-            rows[row_id].label,
-            rows[row_id].title,
-            row_id,
-            accepted=rows[row_id].verdict.startswith("accepted"),
+    entries = {e["id"]: (e, part["title"]) for part in record["parts"] for e in part["entries"]}
+    found = []
+    for row_id in (row_id for row_id in listed | seen if row_id in rows):
+        entry, place = entries[row_id]
+        leads = bool(entry.get("leads"))
+        found.append(
+            Failure(
+                prefix + row_id,
+                rows[row_id].label,
+                rows[row_id].title,
+                row_id,
+                accepted=rows[row_id].verdict.startswith("accepted"),
+                place="" if leads else place,
+                leads=leads,
+            )
         )
-        for row_id in (listed | seen)
-        if row_id in rows
-    )
+    return tuple(sorted(found, key=lambda failure: not failure.leads))
 
 
 def load_rows(parts: Sequence[Mapping[str, Any]], rows: Rows, prefix: str) -> tuple[LoadRow, ...]:

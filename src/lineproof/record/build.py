@@ -240,6 +240,8 @@ class _Builder:
                 row["proof"] = True
             if not holds and extra.get("exception"):
                 row["exception"] = extra["exception"]
+            if not holds and extra.get("leads"):
+                row["leads"] = True
         return row
 
     def _note_symbol(self, entry: Entry) -> None:

@@ -240,6 +240,8 @@ def _criterion(entry_id: str, entry: Data) -> None:
         printed = entry["printed"].get("utilisation")
         if not is_number(entry["utilisation"]) or not is_number_text(printed):
             raise UserError(f"record: {entry_id}: the utilisation is not a number")
+    if entry.get("leads") is not None:
+        need(entry, entry_id, leads=bool)
     if entry.get("exception") is not None:
         need(entry, entry_id, exception=dict)
         need(entry["exception"], entry_id, reason=str, initials=str)

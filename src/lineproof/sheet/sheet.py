@@ -230,17 +230,19 @@ class Sheet(Finding):
         unit: str | None = None,
         accepted: str = "",
         initials: str = "",
+        leads: bool = False,
         **bound: Entry,
     ) -> Entry:
         """Record a check with its utilisation.
 
         A failing check that the engineer accepts carries the reason and his initials, and prints
-        as such.
+        as such. One that ``leads`` stands first where failing checks are listed.
         """
         if bool(accepted) != bool(initials):
             raise UserError("an accepted exception needs both: accepted='reason', initials='A.B.'")
         exception = {"reason": accepted, "initials": initials} if accepted else None
-        extra = {"exception": exception} if exception else {}
+        extra: dict[str, Any] = {"exception": exception} if exception else {}
+        extra |= {"leads": True} if leads else {}
         return self._compare(CHECK, test, key, title, unit, extra, bound)
 
     def _compare(

@@ -58,9 +58,9 @@ def test_bending() -> None:
     assert verified(use, variables) == {"A_s": 2230, "h": 650, "b_w": None, "f_c": None}
     # more than about 5600 mm2 would not yield: "or more" holds up to 4 x 2000 mm2 only for depth
     assert told(cures(use, variables)) == (
-        "It would hold with 2230 mm² of bars (5-25M) or with a depth of 650 mm or more, each "
-        "alone, with all else and the loads as they are; no width of the web up to 1500 mm and no "
-        "concrete up to 80 MPa would do."
+        "It would hold with any one of these alone, all else and the loads as they are: "
+        "(a) 2230 mm² of bars (5-25M); (b) a depth of 650 mm or more. No width of the web up to "
+        "1500 mm and no concrete up to 80 MPa would do."
     )
 
 

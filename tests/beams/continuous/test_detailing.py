@@ -293,7 +293,7 @@ def test_a_gap_fails_in_the_record() -> None:
     made = entries(record.data)
     assert made["coverage-bottom/strength"]["holds"] is False
     assert made["anchorage-bottom-2-left-cut-1/cut-extension"]["holds"] is False
-    assert "bottom bars, span 2: not enough from" in made["coverage/gap-1"]["text"]
+    assert "Not enough bottom bars, span 2, " in made["coverage/gap-1"]["text"]
     assert any("FAILS" in cell for row in made["coverage/stations"]["rows"] for cell in row)
     assert list(faults(record.data)) == []
 

@@ -212,10 +212,9 @@ def test_a_bar_cut_shorter_is_found() -> None:
     assert told
     assert all(text.startswith("span 2, bottom, 1") for text in told)
     assert "coverage-bottom/strength" in found.record.failed
-    notes = [e["text"] for e in found.record.entries.values() if e["id"].startswith("coverage/gap")]
-    assert any(
-        note.startswith("NOT covered: bottom bars, span 2: not enough from 1") for note in notes
-    )
+    notes = [e for e in found.record.entries.values() if e["id"].startswith("coverage/gap")]
+    assert {note["title"] for note in notes} == {"NOT covered"}
+    assert any(note["text"].startswith("Not enough bottom bars, span 2, ") for note in notes)
 
 
 def test_a_stretch_without_any_bars_is_printed_and_fails() -> None:

@@ -153,7 +153,7 @@ def test_a_proposal_that_does_not_cover_is_refused(monkeypatch: pytest.MonkeyPat
     run(beam, CALLS[: CALLS.index("anchorage")])
     with monkeypatch.context() as patch:
         patch.setattr("lineproof.beams.continuous.anchorage_chapter.record_detailing", with_a_gap)
-        with pytest.raises(UserError, match="bars: bottom bars, span 2: not enough from"):
+        with pytest.raises(UserError, match="bars: Not enough bottom bars, span 2,"):
             beam.anchorage()
     with pytest.raises(UserError, match=r"beam\.anchorage\(\) stopped with an error"):
         beam.sheet.close()

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from decimal import Decimal
@@ -194,6 +195,10 @@ def _record_expressions(steps: Steps, designed: Designed, bar: Bar) -> None:
 def _record_general(steps: Steps, designed: Designed, symbol: str) -> None:
     sheet, stirrups = steps.sheet, designed.basis.stirrups
     steps.lines(development.CENTRES, development.TO_SURFACE, development.D_CS)
+    if math.isinf(stirrups.spacing):
+        steps.bind(K_tr=sheet.given("K_tr", "0 mm", source="no stirrups all along the beam"))
+        steps.line(development.GENERAL, symbol)
+        return
     spacing = sheet.given("s", plain(stirrups.spacing, "mm"), source="largest along the beam")
     steps.bind(
         n_v=sheet.given("n_v", str(stirrups.legs), source="as laid"),

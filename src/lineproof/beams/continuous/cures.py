@@ -10,6 +10,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
+from string import ascii_lowercase
 
 from lineproof.errors import UserError
 from lineproof.formula import Criterion
@@ -156,26 +157,40 @@ def cures(utilisation: Utilisation, variables: Mapping[str, Variable]) -> tuple[
 
 
 def told(found: Sequence[Cure]) -> str:
-    """Return the cures in a sentence, each alone; then what would not do.
+    """Return the cures in words, several lettered, each alone; then what would not do.
 
     >>> told([Cure("h", 670.0, "a depth of 670 mm or more", 0.99),
     ...       Cure("f_c", None, "no concrete up to 80 MPa")])
-    'It would hold with a depth of 670 mm or more, all else and the loads as they are; no concrete \
+    'It would hold with a depth of 670 mm or more, all else and the loads as they are. No concrete \
 up to 80 MPa would do.'
     """
     able = [cure.text for cure in found if cure.value is not None]
     unable = [cure.text for cure in found if cure.value is None]
+    none = f"{_sentence_case(_joined(unable))} would do" if unable else ""
     if not able:
-        return f"{_sentence_case(_joined(unable, 'and'))} would do alone." if unable else ""
-    alone = ", each alone, with all else" if len(able) > 1 else ", all else"
-    said = f"It would hold with {_joined(able, 'or with')}{alone} and the loads as they are"
-    return f"{said}; {_joined(unable, 'and')} would do." if unable else f"{said}."
+        return f"{none} alone." if none else ""
+    others = "all else and the loads as they are"
+    said = f"It would hold with {able[0]}, {others}."
+    if len(able) > 1:
+        said = f"It would hold with any one of these alone, {others}: {lettered(able)}."
+    return f"{said} {none}." if none else said
 
 
-def _joined(texts: Sequence[str], word: str) -> str:
+def lettered(texts: Sequence[str]) -> str:
+    """Return several texts in one, each with its letter; a single one as it is.
+
+    >>> lettered(["a depth of 670 mm", "a web 400 mm wide"])
+    '(a) a depth of 670 mm; (b) a web 400 mm wide'
+    """
     if len(texts) == 1:
         return texts[0]
-    return f"{', '.join(texts[:-1])} {word} {texts[-1]}"
+    return "; ".join(f"({ascii_lowercase[i]}) {text}" for i, text in enumerate(texts))
+
+
+def _joined(texts: Sequence[str]) -> str:
+    if len(texts) == 1:
+        return texts[0]
+    return f"{', '.join(texts[:-1])} and {texts[-1]}"
 
 
 def _sentence_case(text: str) -> str:

@@ -8,7 +8,7 @@ from dataclasses import dataclass, field, replace
 
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
-from lineproof.beams.continuous.cures import Cure, Variable, told
+from lineproof.beams.continuous.cures import Cure, Variable, lettered, told
 from lineproof.beams.continuous.cures_cuts import cut_cures, cut_of
 from lineproof.beams.continuous.cures_gaps import (
     gap_cures,
@@ -132,8 +132,11 @@ def _size(design: Design) -> str:
 
 
 def failing_rows(design: Design, found: Found) -> Iterator[Row]:
-    """Give a row for every check that fails, one for those of a part with the same cures."""
-    for part in design.model.sheet.parts:
+    """Give a row for every check that fails, one for those of a part with the same cures.
+
+    Checks that lead stand first.
+    """
+    for part in sorted(design.model.sheet.parts, key=lambda part: not _leads(part)):
         rows: dict[str, list[Entry]] = {}
         for check in failing(part):
             rows.setdefault(_briefly(design, check, found), []).append(check)
@@ -144,10 +147,14 @@ def failing_rows(design: Design, found: Found) -> Iterator[Row]:
             yield Row((part.title, titles, ratio_text(worst), cure), worst)
 
 
+def _leads(part: Part) -> bool:
+    return any((check.extra or {}).get("leads") for check in failing(part))
+
+
 def _briefly(design: Design, check: Entry, found: Found) -> str:
     """Return the cures alone, without what would not do; the whole sentence where none does."""
     able = [cure.text for cure in _once(design, check, found) if cure.value is not None]
-    return "; or ".join(able) if able else cure_text(design, check, found)
+    return lettered(able) if able else cure_text(design, check, found)
 
 
 # -- stirrups where there are none -----------------------------------------------------------

@@ -33,7 +33,6 @@ from lineproof.beams.continuous.resistance_cover import (
     ROUND_OFF,
     Coverage,
     Gap,
-    covered,
     ratios,
     worst_of,
     yield_force,
@@ -63,7 +62,7 @@ def gap_of(design: Design, check: Entry) -> Gap | None:
     own, worst = _OWN.fullmatch(key), _WORST.fullmatch(key)
     if own is None and worst is None:
         return None
-    found = covered(design.designed, design.runs)
+    found = design.coverage
     if own is not None:
         return found.gaps[int(own[1]) - 1]
     assert worst is not None  # one of the two  # noqa: S101
@@ -229,7 +228,7 @@ def _moved(trial: _Trial, ending: Runs, starting: Runs) -> Cure | None:
     for more in (cure.value + farther for farther in _FARTHER):
         if more <= room and trial.stands(longer(more)):
             return replace(cure, value=more, text=variable.text(more, all_beyond=False))
-    return Cure("longer", None, f"none of the greater lengths tried of {which} {_NOTHING_ELSE}")
+    return Cure("longer", None, f"no greater length of {which} {_NOTHING_ELSE}")
 
 
 def _grown(run: BarRun, before: float, after: float) -> BarRun:
@@ -284,7 +283,7 @@ def _of_size(trial: _Trial, size: str) -> Cure | None:
                 f"{FROM}{layer}"
             )
             return Cure("number", made.number, text, trial.use((*trial.runs, made)))
-    return Cure("number", None, f"none of the further bars tried {_UP_TO} {_NOTHING_ELSE}")
+    return Cure("number", None, f"{NO_FURTHER} {_NOTHING_ELSE}")
 
 
 def _stretches(trial: _Trial, bar: BarRun) -> Iterator[tuple[float, float]]:

@@ -30,7 +30,7 @@ from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_demand import stretch_at
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps, only
-from lineproof.formula import COMMON_PRACTICE
+from lineproof.formula import COMMON_PRACTICE, Criterion
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
 
@@ -139,8 +139,15 @@ def record_extension(site: Site, steps: Steps, t_point: float, t: float, runs: R
     past.bind(x_e=site.given("x_e", t), d_b=site.bar(thickest(runs))["d_b"])
     past.line(clause.EXTENSION)
     past.line(clause.PAST_INWARD if side.face == "bottom" else clause.PAST_OUTWARD)
-    past.check(clause.EXTENDED)
+    past.check(clause.EXTENDED, title=ends_before(clause.EXTENDED, past.entry("l_ext")))
     return past
+
+
+def ends_before(test: Criterion, l_ext: Entry) -> str:
+    """Return a title for a check of an extension that is negative, else ""."""
+    if l_ext.value >= 0:
+        return ""
+    return f"{test.title}: the bars end {-l_ext.value:.0f} mm before it"
 
 
 def _record_angle(site: Site, steps: Steps, place: float) -> None:

@@ -18,7 +18,7 @@ from lineproof.beams.continuous.cutoff import (
     support_of,
 )
 from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes, tip
-from lineproof.beams.continuous.cutoff_record import Site, record_extension, thickest
+from lineproof.beams.continuous.cutoff_record import Site, ends_before, record_extension, thickest
 from lineproof.beams.continuous.cutoff_sets import (
     begin,
     grouped,
@@ -246,10 +246,15 @@ def _record_inflection(site: Site, point: Point) -> None:
     steps.bind(x_t=site.given("x_t", point.t, f"point of inflection, {case}"))
     past = record_extension(site, steps, point.t, side.t_kept, side.kept)
     past.line(clause.LENGTH_PAST_INFLECTION)
-    past.check(clause.LONG_PAST_INFLECTION)
-    A_pi = record_area(
-        Steps(sheet, writers.sizes), grouped(writers, side.kept), "A_pi", depth=False
-    )
+    l_ext = past.entry("l_ext")
+    title = ends_before(clause.LONG_PAST_INFLECTION, l_ext)
+    past.check(clause.LONG_PAST_INFLECTION, title=title)
+    if l_ext.value >= 0:
+        A_pi = record_area(
+            Steps(sheet, writers.sizes), grouped(writers, side.kept), "A_pi", depth=False
+        )
+    else:
+        A_pi = sheet.given("A_pi", "0 mm2", source="all of them end before it")
     past.bind(A_pi=A_pi, A_s=site.section["A_s"])
     past.check(clause.TOP_PAST_INFLECTION)
 

@@ -9,6 +9,7 @@ from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.figure_bends import bends_figures
 from lineproof.beams.continuous.figure_cross_section import sections_of
 from lineproof.beams.continuous.figure_elevation import elevation_figures
+from lineproof.beams.continuous.figure_elevation_gaps import Short
 from lineproof.beams.continuous.quantities import NOTE as QUANTITY_NOTE
 from lineproof.beams.continuous.quantities import quantities
 from lineproof.beams.continuous.schedule import Schedule, over_stock, schedule
@@ -93,15 +94,29 @@ def _figure(
     )  # fmt: skip
 
 
+def _short(design: Design) -> list[Short]:
+    """Return where given bars are not enough, as the elevation shows it."""
+    if not design.given:
+        return []
+    return [
+        Short(gap.face, gap.span, gap.start, gap.end, f"gap {gap.reach}" if gap.bare else gap.reach)
+        for gap in design.coverage.gaps
+    ]
+
+
 def record_drawings(design: Design, front: int) -> None:
     """Record elevation and sections inside the open part, for the page and as DXF."""
     made = schedule_of(design)
     sheet, aggregate = design.model.sheet, design.model.inputs.aggregate.value
     rests = _rests_on(sheet)
-    sections = sections_of(design.outline, made.detailing, aggregate=aggregate)
+    sections = sections_of(
+        design.outline, made.detailing, aggregate=aggregate, stirrup=design.model.inputs.stirrup
+    )
     marks = tuple((letter, x) for letter, x, _ in sections)
     grade = design.model.inputs.grade
-    drawn = elevation_figures(design.outline, made.detailing, sections=marks, grade=grade)
+    drawn = elevation_figures(
+        design.outline, made.detailing, sections=marks, short=_short(design), grade=grade
+    )
     for number, figure in enumerate(drawn, start=1):
         dxf = "elevation" if len(drawn) == 1 else f"elevation-{number}"
         _figure(sheet, f"elevation-{number}", figure, front, rests, dxf=dxf)

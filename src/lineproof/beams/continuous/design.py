@@ -47,6 +47,7 @@ from lineproof.beams.continuous.flexure_choice import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import Standing, stand
+from lineproof.beams.continuous.resistance_cover import Coverage, covered
 from lineproof.beams.continuous.shear_stretches import basis_of, span_numbers, stretches_of
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.errors import UserError
@@ -109,6 +110,11 @@ class Design:
     def top_counted(self, face: Face) -> tuple[Developed, ...]:
         """Return the top bars that count at the face of a support."""
         return developed_at(self._standing, "top", self._place(face))
+
+    @cached_property
+    def coverage(self) -> Coverage:
+        """How the bars along the beam carry every load case, with the gaps."""
+        return covered(self.designed, self.runs)
 
     @cached_property
     def _standing(self) -> tuple[Standing, ...]:
@@ -255,12 +261,16 @@ def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choic
 
 
 def _counted(designed: Designed, choice: Choice) -> Stirrups:
-    """Return the stirrups as anchorage counts them: the largest spacing along the beam."""
-    spacings = [zone.spacing for zone in choice.zones] or [FIRST_SPACING]
+    """Return the stirrups as anchorage counts them: the largest spacing along the beam.
+
+    It is infinite where some stretch has none.
+    """
+    spacings = [band.spacing for check in choice.checks for band in check.bands]
+    spacing = max([*spacings, *(zone.spacing for zone in choice.zones)])
     least = min(check.state.minimum_spacing for check in choice.checks)
     return replace(
-        designed.basis.stirrups, spacing=max(spacings), legs=choice.basis.legs,
-        minimum=bool(choice.zones) and max(spacings) <= least * (1 + 1e-12),
+        designed.basis.stirrups, spacing=spacing, legs=choice.basis.legs,
+        minimum=spacing <= least * (1 + 1e-12),
     )  # fmt: skip
 
 

@@ -7,6 +7,7 @@ bars that are lapped and together reach yield stand as one.
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
@@ -190,13 +191,17 @@ def _record_group(steps: Steps, counted: Counted, mark: str, where: str) -> tupl
 
 
 def _record_part(steps: Steps, A_s: Entry, short: Developed, mark: str, where: str) -> Entry:
-    """Record the area of bars that are developed in part, from a place to their nearer end."""
+    """Record the area of bars that are developed in part, from a place to their nearer end.
+
+    The lengths are rounded to 0.1 mm, to the safe side, so that the line is followed by hand.
+    """
     given = steps.sheet.given
     l_av = given(
-        f"l_av{mark}", plain(short.length, "mm"), f"length from {where} to the end of the bars",
-        source="as laid",
+        f"l_av{mark}", plain(math.floor(10 * short.length) / 10, "mm"),
+        f"length from {where} to the end of the bars", source="as laid",
     )  # fmt: skip
     l_d = given(
-        f"l_d{mark}", plain(short.rise, "mm"), "length needed", source="anchorage, the same bars"
-    )
+        f"l_d{mark}", plain(math.ceil(10 * short.rise) / 10, "mm"), "length needed",
+        source="anchorage, the same bars",
+    )  # fmt: skip
     return steps.line(development.DEVELOPED_AREA, f"A_sd{mark}", A_s=A_s, l_av=l_av, l_d=l_d)

@@ -60,15 +60,17 @@ def section_at(
     letter: str = "",
     tension: Face = "bottom",
     aggregate: float = 20.0,
+    stirrup: str = "",
     title: str = "",
 ) -> Figure:
     """Draw the section at the station ``x`` with the bars and stirrups that stand there.
 
     ``tension`` tells from which side the effective depth is measured; ``aggregate`` is the
     largest aggregate, which sets the distance between layers. Bars are placed in the bends of
-    the stirrup as the check of their clear distance has them.
+    the stirrup as the check of their clear distance has them, of the size ``stirrup`` where none
+    stand.
     """
-    steel = steel_at(outline_, detailing, x, aggregate)
+    steel = steel_at(outline_, detailing, x, aggregate, stirrup)
     shape = _shape(outline_, steel.span)
     shown = choose_scale(shape, ROOM, TALLEST)
     circles = web_circles(steel)
@@ -84,6 +86,7 @@ def section_at(
         *outline(shape, shown),
         *stirrup_shapes(steel),
         *drawn,
+        *_missing(shape, shown, steel),
         *_dimensions(shape, shown, steel, first, tension, [circle for _, circle in circles]),
         *_callouts(shape, shown, left, way=-1.0),
         *_callouts(shape, shown, right, way=1.0),
@@ -116,7 +119,7 @@ def section_at(
 
 
 def sections_of(
-    outline_: BeamOutline, detailing: Detailing, *, aggregate: float = 20.0
+    outline_: BeamOutline, detailing: Detailing, *, aggregate: float = 20.0, stirrup: str = ""
 ) -> tuple[tuple[str, float, Figure], ...]:
     """Return letter, station and figure of the sections of a beam: spans and faces of supports.
 
@@ -139,11 +142,23 @@ def sections_of(
         seen.add(key)
         letter = _letter(len(found))
         figure = section_at(
-            outline_, detailing, x, tension=tension, aggregate=aggregate,
+            outline_, detailing, x, tension=tension, aggregate=aggregate, stirrup=stirrup,
             title=f"Section {letter}: {where}",
         )  # fmt: skip
         found.append((letter, x, figure))
     return tuple(found)
+
+
+def _missing(shape: SectionShape, shown: Shown, steel: Steel) -> list[Shape]:
+    """Say in the section of a face without bars that there are none."""
+    inset = 5.5 / shown.scale
+    rows: tuple[tuple[Face, float], ...] = (("bottom", inset), ("top", shape.h - inset))
+    faces = {run.face for run in steel.runs if run.place != "side face"}
+    return [
+        Text((shape.b_w / 2, y), words(f"no {face} bars"), "text", TEXT_SIZE)
+        for face, y in rows
+        if face not in faces
+    ]
 
 
 def _letter(number: int) -> str:

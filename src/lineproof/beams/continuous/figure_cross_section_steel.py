@@ -79,13 +79,18 @@ class Steel:
         return sum(each * depth for each, depth in parts) / area if area else None
 
 
-def steel_at(outline: BeamOutline, detailing: Detailing, x: float, aggregate: float) -> Steel:
-    """Return the steel at a station; the stirrups beside it where it lies between zones."""
+def steel_at(
+    outline: BeamOutline, detailing: Detailing, x: float, aggregate: float, stirrup: str = ""
+) -> Steel:
+    """Return the steel at a station; the stirrups beside it where it lies between zones.
+
+    ``stirrup`` is the size that bars are placed for in a span without any.
+    """
     span = span_of(outline, x)
     runs = tuple(run for run in detailing.bars if run.start <= x <= run.end)
     zones = [zone for zone in detailing.stirrups if zone.span == span]
     zone = min(zones, key=lambda each: _beyond(each, x), default=None)
-    size = zone.size if zone else ""
+    size = zone.size if zone else stirrup
     diameter = BARS.number(size, "d_b") if size else 0.0
     bend = stirrup_radius(size) if size else 0.0
     return Steel(outline, span, runs, zone, diameter, bend, aggregate)

@@ -11,6 +11,8 @@ from lineproof.beams.continuous.figure_elevation_bars import (
     pulled_bars,
 )
 from lineproof.beams.continuous.figure_elevation_concrete import STUB, axis_lines, concrete
+from lineproof.beams.continuous.figure_elevation_gaps import NOTE as SHORT
+from lineproof.beams.continuous.figure_elevation_gaps import Short, gap_shapes, shown
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, parts, view
 from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
@@ -21,7 +23,8 @@ from lineproof.drawing.paper import FIT_MARGIN
 TOP_ROW = 5.0
 """Where the rows of top bars begin over the beam, mm on paper."""
 BUBBLE = 2.4
-NOTE = 2.6
+NOTE, LINE = 2.6, 3.6
+"""Size of the notes and the distance of their lines, mm on paper."""
 Section = tuple[str, float]
 """Letter of a section and its station [mm]."""
 
@@ -31,11 +34,14 @@ def elevation_figures(
     detailing: Detailing,
     *,
     sections: Sequence[Section] = (),
+    short: Sequence[Short] = (),
     grade: str = "400R",
 ) -> tuple[Figure, ...]:
     """Return the elevation in rows of spans, each at a scale that can be read on the page."""
     return tuple(
-        elevation_figure(outline, detailing, spans=spans, sections=sections, grade=grade)
+        elevation_figure(
+            outline, detailing, spans=spans, sections=sections, short=short, grade=grade
+        )
         for spans in parts(outline)
     )
 
@@ -46,40 +52,44 @@ def elevation_figure(
     *,
     spans: tuple[int, int] | None = None,
     sections: Sequence[Section] = (),
+    short: Sequence[Short] = (),
     grade: str = "400R",
 ) -> Figure:
     """Draw the spans given (the whole beam without) on the width of the page.
 
-    ``detailing`` has its marks (:func:`lineproof.beams.continuous.schedule.schedule`).
+    Stretches ``short`` of bars are hatched. ``detailing`` has its marks
+    (:func:`lineproof.beams.continuous.schedule.schedule`).
     """
     seen = view(outline, detailing, spans or (1, len(outline.lengths)))
     top = [run for run in detailing.bars if _above(run)]
     low = [run for run in detailing.bars if not _above(run)]
-    rows_up, rows_down = pulled_bars(seen, top, grade), pulled_bars(seen, low, grade)
+    rows_up, rows_down = (pulled_bars(seen, runs, grade, short) for runs in (top, low))
     tops, ceiling = levels(rows_up, TOP_ROW, 1)
     zones, zone_height = zone_block(seen, detailing.stirrups, -seen.deepest * seen.scale - STUB)
     first_low = -seen.deepest * seen.scale - STUB - zone_height - 2.0
     lows, floor = levels(rows_down, first_low, -1)
+    notes = _note_lines(seen, detailing, short)
     shapes = [
         *axis_lines(seen, ceiling, floor - 11.0, BUBBLE),
         *concrete(seen),
         *stirrup_lines(seen, detailing.stirrups),
         *bars_in_place(seen, detailing.bars, outline.cover),
+        *gap_shapes(seen, short),
         *_section_marks(seen, sections),
         *draw_rows(seen, rows_up, tops),
         *zones,
         *draw_rows(seen, rows_down, lows),
         *_spans(seen, floor),
-        *_notes(seen, detailing, floor - 16.5),
+        *_notes(seen, notes, floor - 16.5),
     ]
-    bottom = 24.0 - floor
+    bottom = max(24.0, 18.2 + LINE * (len(notes) - 1)) - floor
     return Figure(
         PAGE_WIDTH,
         round(bottom + ceiling + 2 * BUBBLE + 1.5, 1),
         seen.scale,
         (round(seen.left - seen.low * seen.scale, 4), round(bottom, 1)),
         tuple(shapes),
-        _alt(seen, detailing),
+        _alt(seen, detailing, short),
         _caption(seen),
     )
 
@@ -130,7 +140,7 @@ def _spans(seen: View, floor: float) -> list[Shape]:
     return shapes
 
 
-def _notes(seen: View, detailing: Detailing, height: float) -> list[Shape]:
+def _note_lines(seen: View, detailing: Detailing, short: Sequence[Short]) -> list[str]:
     closed = {zone.closed for zone in detailing.stirrups if zone.span in seen.spans}
     legs = {zone.legs for zone in detailing.stirrups if zone.span in seen.spans}
     forms = " and ".join("closed" if each else "open" for each in sorted(closed))
@@ -143,8 +153,12 @@ def _notes(seen: View, detailing: Detailing, height: float) -> list[Shape]:
             f"Stirrups: {forms}, {count} legs; number, size, spacing, mark, and the distance from "
             "the first to the last stirrup of a zone."
         )
+    return [*lines, SHORT] if shown(seen, short) else lines
+
+
+def _notes(seen: View, lines: Sequence[str], height: float) -> list[Shape]:
     return [
-        Text(seen.at(1.0, height - 3.6 * number), words(line), "text", NOTE, "start")
+        Text(seen.at(1.0, height - LINE * number), words(line), "text", NOTE, "start")
         for number, line in enumerate(lines)
     ]
 
@@ -157,7 +171,7 @@ def _caption(seen: View) -> str:
     return f"Elevation, spans {seen.first} to {seen.last}"
 
 
-def _alt(seen: View, detailing: Detailing) -> str:
+def _alt(seen: View, detailing: Detailing, short: Sequence[Short]) -> str:
     """Say in words what the elevation shows."""
     outline = seen.outline
     parts_ = [
@@ -184,11 +198,14 @@ def _alt(seen: View, detailing: Detailing) -> str:
     ]
     if zones:
         parts_.append(f"stirrups: {', '.join(zones)}")
-    return _short("; ".join(parts_))
+    parts_ += [
+        f"span {each.span}, {each.face} bars not enough: {each.text}" for each in shown(seen, short)
+    ]
+    return _cut("; ".join(parts_))
 
 
 LONGEST_ALT = 3900
 
 
-def _short(text: str) -> str:
+def _cut(text: str) -> str:
     return f"{text[:LONGEST_ALT]} ..." if len(text) > LONGEST_ALT else f"{text}."

@@ -14,6 +14,7 @@ from lineproof.beams.continuous.figure_elevation_cuts import (
     Cut,
     cut_lengths,
 )
+from lineproof.beams.continuous.figure_elevation_gaps import Short
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.schedule import shape_of
@@ -59,14 +60,19 @@ class Pulled:
     reach: tuple[float, float]
 
 
-def pulled_bars(view: View, bars: Sequence[BarRun], grade: str) -> list[list[Pulled]]:
-    """Return rows of runs, nearest the beam first, so that nothing in a row touches."""
+def pulled_bars(
+    view: View, bars: Sequence[BarRun], grade: str, short: Sequence[Short] = ()
+) -> list[list[Pulled]]:
+    """Return rows of runs, nearest the beam first, so that nothing in a row touches.
+
+    Ends of bars in a stretch that is ``short`` of bars are dimensioned before others.
+    """
     low, high = view.own
     shown = [run for run in bars if run.start < high - LEAST_SHOWN and run.end > low + LEAST_SHOWN]
     shown.sort(key=lambda run: (run.place == "overhang", run.layer, run.start, -run.end))
     rows: list[list[Pulled]] = []
     for run in shown:
-        drawn = _pulled(view, run, grade)
+        drawn = _pulled(view, run, grade, short)
         free = next((row for row in rows if _fits(row, drawn)), None)
         if free is None:
             rows.append([drawn])
@@ -81,7 +87,7 @@ def _fits(row: Sequence[Pulled], new: Pulled) -> bool:
     )
 
 
-def _pulled(view: View, run: BarRun, grade: str) -> Pulled:
+def _pulled(view: View, run: BarRun, grade: str, short: Sequence[Short]) -> Pulled:
     start, end = max(run.start, view.low), min(run.end, view.high)
     label = _label(run, grade)
     half = text_width(label, LABEL) / 2
@@ -91,7 +97,7 @@ def _pulled(view: View, run: BarRun, grade: str) -> Pulled:
     cut_off = start > run.start or end < run.end
     hooked = bool(run.hook_start or run.hook_end)
     in_way = over_end and (cut_off or (hooked and run.face == "bottom"))
-    cuts = cut_lengths(view, run)
+    cuts = cut_lengths(view, run, short)
     ends = [left, right, middle - half, middle + half]
     for cut in cuts:
         ends.extend(cut.reach(view))

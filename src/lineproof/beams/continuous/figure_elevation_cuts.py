@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, replace
 from itertools import product
 from typing import Literal
 
+from lineproof.beams.continuous.figure_elevation_gaps import Short
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.drawing.metrics import text_width
@@ -54,25 +56,32 @@ class Cut:
         return (low - more, high) if self.outside == "start" else (low, high + more)
 
 
-def cut_lengths(view: View, run: BarRun) -> tuple[Cut, ...]:
+def cut_lengths(view: View, run: BarRun, short: Sequence[Short] = ()) -> tuple[Cut, ...]:
     """Return the cut-off lengths of a run, from the nearest axes, with places for their texts.
 
     Where two cannot stand beside each other one is enough, since the length of the bar is
-    printed: the one without a hook, then the shorter.
+    printed: the one in a stretch that is ``short`` of bars, the one without a hook, the shorter.
     """
-    cuts = _nearest(view, run)
+
+    def rank(cut: Cut) -> tuple[bool, bool, float]:
+        inside = any(each.bounded_by(run, cut.end) for each in short)
+        return not inside, bool(cut.hook), cut.length
+
+    cuts = _nearest(view, run, rank)
     best = _placed(view, run, cuts)
     if best is not None:
         return best
-    for cut in sorted(cuts, key=lambda each: (bool(each.hook), each.length)):
+    for cut in sorted(cuts, key=rank):
         alone = _placed(view, run, (cut,))
         if alone is not None:
             return alone
     return ()
 
 
-def _nearest(view: View, run: BarRun) -> tuple[Cut, ...]:
-    """Measure each visible end from its nearest axis; of two on one side the nearer is enough."""
+def _nearest(
+    view: View, run: BarRun, rank: Callable[[Cut], tuple[bool, bool, float]]
+) -> tuple[Cut, ...]:
+    """Measure each visible end from its nearest axis; of two on one side one is enough."""
     axes = view.outline.axes
     cuts = tuple(
         cut
@@ -84,7 +93,7 @@ def _nearest(view: View, run: BarRun) -> tuple[Cut, ...]:
     if len(cuts) > 1 and cuts[0].axis == cuts[1].axis:
         same_side = (cuts[0].end < cuts[0].axis) == (cuts[1].end < cuts[1].axis)
         if same_side:
-            return (min(cuts, key=lambda cut: cut.length),)
+            return (min(cuts, key=lambda cut: (rank(cut)[0], cut.length)),)
     return cuts
 
 

@@ -5,8 +5,9 @@ Moments are drawn on the side in tension: positive moments below the axis.
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from types import MappingProxyType
 
 from lineproof.beams.continuous.figure_along import Along, Curve, Mark, along_figure
 from lineproof.beams.continuous.layout import BeamOutline
@@ -135,11 +136,15 @@ def _ends(outline: BeamOutline, piece: MomentPiece) -> list[Mark]:
 
 
 def shear_figure(
-    outline: BeamOutline, pieces: Sequence[ShearPiece], stations: Sequence[float] = ()
+    outline: BeamOutline,
+    pieces: Sequence[ShearPiece],
+    stations: Sequence[float] = (),
+    own: Mapping[float, float] = MappingProxyType({}),
 ) -> Figure:
     """Draw the shear envelope with the resistance of the zones, both signs.
 
-    Values are printed at ``stations`` [mm], the critical sections; without them at the faces.
+    Values are printed at ``stations`` [mm], the critical sections; without them at the faces. A
+    section beside a stretch without resistance has its ``own`` [N].
     Only between the critical sections of a span is a shear over the resistance marked: nearer
     the supports the shear of the critical section holds.
     """
@@ -162,6 +167,7 @@ def shear_figure(
         wanted = critical or [start, end]
         for x in wanted:
             high, low, V_r = (_at(piece.x, y, x) for y in (piece.V_max, piece.V_min, piece.V_r))
+            V_r = V_r or own.get(x, 0.0)
             if high >= -low:
                 above.append(_mark(x, KN * high, KN * V_r, "V"))
             else:

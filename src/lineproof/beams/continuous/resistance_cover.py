@@ -83,29 +83,32 @@ class Gap:
         return same and self.start <= other.start and other.end <= self.end
 
     @property
-    def title(self) -> str:
-        """Where it is, from the left axis of its span, as a check of it is called."""
-        return f"Gap in the {self.face} bars, span {self.span}, {self._from_axis} its left axis"
+    def bare(self) -> bool:
+        """Whether no bars count at its worst station."""
+        return self.worst == np.inf
 
     @property
-    def _from_axis(self) -> str:
-        """From where to where it reaches, from the left axis of its span, in words."""
+    def title(self) -> str:
+        """Where it is, from the left axis of its span, as a check of it is called."""
+        what = f"Gap in the {self.face} bars" if self.bare else f"Not enough {self.face} bars"
+        return f"{what}, span {self.span}, {self.reach} m from its left axis"
+
+    @property
+    def reach(self) -> str:
+        """From where to where it reaches, from the left axis of its span [m]."""
         left = self.at.x - self.at.local
-        start, end = ((x - left) / 1e3 for x in (self.start, self.end))
-        return f"{start:.2f} to {end:.2f} m from"
+        return f"{(self.start - left) / 1e3:.2f} to {(self.end - left) / 1e3:.2f}"
 
     def __str__(self) -> str:
         """Say where it is, and what acts and holds at its worst station."""
-        ratio = "no bars count there" if self.worst == np.inf else f"{self.worst:.2f} of what holds"
         at, what, unit, size = self.at, "moment", "kN·m", 1e6
         now, held = at.M_f, at.M_r
         if at.by_tension:
             what, unit, size, now, held = "tension", "kN", 1e3, at.F, at.F_r
+        ratio = "no bars count there" if self.bare else f"ratio {self.worst:.2f}"
         return (
-            f"{self.face} bars, span {self.span}: not enough from {self.start:.0f} to "
-            f"{self.end:.0f} mm along the beam ({ratio}), that is {self._from_axis} "
-            f"the left axis of the span; worst at {at.local / 1e3:.2f} m: a {what} of "
-            f"{now / size:.0f} {unit}, resistance {held / size:.0f} {unit}"
+            f"{self.title}; worst at {at.local / 1e3:.2f} m: a {what} of {now / size:.0f} {unit} "
+            f"against {held / size:.0f} {unit}, {ratio}"
         )
 
 

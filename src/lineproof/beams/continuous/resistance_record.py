@@ -83,7 +83,8 @@ def _record_worst(laid: Laid, found: Coverage, face: Face) -> Iterator[Station]:
 def _record_gap(laid: Laid, gap: Gap, number: int) -> None:
     """Record the worst station of a gap that holds none of those recorded for its face."""
     record = record_tension if gap.at.by_tension else record_moment
-    title = f"{gap.face.capitalize()} bars: gap {number}, span {gap.span}, its worst station"
+    name = f"{gap.face.capitalize()} bars"
+    title = f"{name}: worst station of span {gap.span} between {gap.reach.replace('to', 'and')} m"
     record(laid, gap.at, gap_key(number), title)
 
 
@@ -102,7 +103,7 @@ def _record_table(
             rests_on=_checks(writers),
         )  # fmt: skip
         for number, gap in enumerate(found.gaps, 1):
-            sheet.note(f"gap-{number}", f"NOT covered: {gap}.", title="Gap")
+            sheet.note(f"gap-{number}", f"{gap}.", title="NOT covered")
 
 
 def _checks(writers: Writers) -> list[Entry]:
@@ -137,5 +138,5 @@ def _rows(writers: Writers, standing: Sequence[Standing], span: int) -> list[lis
 
 def _said(ratio: float) -> str:
     if ratio > 1 + 1e-9:
-        return "FAILS" if not np.isfinite(ratio) else f"FAILS {ratio:.2f}"
+        return "FAILS" if not np.isfinite(ratio) else f"{ratio:.2f} FAILS"
     return f"{min(ratio, 0.999):.3f}" if 1 > ratio > 0.999 else f"{ratio:.2f}"  # noqa: PLR2004

@@ -25,15 +25,19 @@ from lineproof.beams.continuous.resistance_cover import ROUND_OFF, Gap, Station,
 from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, stretch_at
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps
+from lineproof.formula import Criterion
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import flexure, shear_bars
 
 COVERAGE = "coverage"
-_NONE_COUNT = (
-    "At {x:g} mm from the left axis of span {span} no {face} bars count: none stand there, or they "
-    "end there."
+_NONE_STAND = (
+    "No {face} bars stand from {start:.2f} to {end:.2f} m from the left axis of span {span}."
+)
+_ENDS_MEET = (
+    "At {start:.2f} m from the left axis of span {span} {face} bars end and others begin: none is "
+    "developed there."
 )
 
 
@@ -47,13 +51,28 @@ class Laid:
     standing: Sequence[Standing]
     gaps: Sequence[Gap] = ()
 
-    def title(self, station: Station, *, tension: bool) -> str:
-        """Return the title of a check of a station: where the gap is, if it is this that fails."""
+    def check(
+        self, steps: Steps, test: Criterion, station: Station, *, tension: bool = False
+    ) -> None:
+        """Record a check of a station; one that fails is called by the gap that it stands for."""
         pair = (station.F, station.F_r) if tension else (station.M_f, station.M_r)
-        if ratio_of(*pair) <= 1 + ROUND_OFF:
-            return ""
-        gap = next((gap for gap in self.gaps if gap.holds(station)), None)
-        return "" if gap is None else gap.title
+        fails = ratio_of(*pair) > 1 + ROUND_OFF
+        gap = next((gap for gap in self.gaps if fails and gap.holds(station)), None)
+        steps.check(
+            test, title="" if gap is None else gap.title, leads=gap is not None and gap.bare
+        )
+
+    def none_stand(self, station: Station) -> str:
+        """Say between which ends of bars no bars of its face stand at a station."""
+        own = [bars.run for bars in self.standing if bars.run.face == station.face]
+        low, high = self.writers.designed.outline.ends
+        start = max((run.end for run in own if run.end <= station.x), default=low)
+        end = min((run.start for run in own if run.start >= station.x), default=high)
+        left = station.x - station.local
+        text = _ENDS_MEET if start == end else _NONE_STAND
+        return text.format(
+            face=station.face, span=station.span, start=(start - left) / 1e3, end=(end - left) / 1e3
+        )
 
 
 def _near(writers: Writers, station: Station) -> tuple[End, float]:
@@ -72,8 +91,7 @@ def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
     bare = station.M_r <= 0
     with sheet.part(key, title):
         if bare:
-            text = _NONE_COUNT.format(x=station.local, span=station.span, face=face)
-            sheet.note("no-bars", text, title="Gap")
+            sheet.note("no-bars", laid.none_stand(station), title="Gap")
             steps = begin(writers, sheet, station.span, face)
         else:
             steps = _developed(laid, station)
@@ -82,7 +100,7 @@ def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
         writers.forces(steps, _demand(writers, station, tension=False), near, x)
         if bare:
             steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars"))
-        steps.check(flexure.STRENGTH, title=laid.title(station, tension=False))
+        laid.check(steps, flexure.STRENGTH, station)
 
 
 def _record_place(writers: Writers, station: Station, near: End, t: float) -> Entry:
@@ -191,11 +209,11 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
         steps.bind(d_v=d_v)
         steps.line(clause.TENSION if helps else clause.TENSION_OTHER_SIDE)
         if cap is None:
-            steps.check(shear_bars.TENSION_SIDE_HOLDS, title=laid.title(station, tension=True))
+            laid.check(steps, shear_bars.TENSION_SIDE_HOLDS, station, tension=True)
             return
         steps.bind(A_sr=cap)
         steps.line(shear_bars.TENSION_SIDE_CAPPED)
-        steps.check(shear_bars.CAPPED_HOLDS, title=laid.title(station, tension=True))
+        laid.check(steps, shear_bars.CAPPED_HOLDS, station, tension=True)
 
 
 def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:

@@ -53,7 +53,7 @@ def stirrup_table(bars: Schedule) -> PrintedTable:
         "Span", "Mark", "Stirrups", "Legs", "Spacing, mm", "Number", "From, mm", "To, mm", "Form",
         "Outside, mm", "Cut length, mm", "kg",
     )  # fmt: skip
-    rows = []
+    rows: list[tuple[str, ...]] = []
     for each in bars.sets:
         zone = each.zone
         rows.append((
@@ -64,6 +64,8 @@ def stirrup_table(bars: Schedule) -> PrintedTable:
             " + ".join(f"{_times(count)}{shape.cut:.0f}" for shape, count in each.pieces),
             f"{each.mass:.1f}",
         ))  # fmt: skip
+    if not rows:
+        rows.append((DASH, DASH, "none", *[DASH] * (len(columns) - 3)))
     return PrintedTable("Stirrup schedule", columns, tuple(rows))
 
 

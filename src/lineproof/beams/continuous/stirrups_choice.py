@@ -196,11 +196,14 @@ def _by_strength(state: SpanState, column: int, wider: float) -> str:
 def _standing(check: SpanCheck) -> Iterator[str]:
     """Say of each stretch of stirrups as given how much it is used."""
     use = np.maximum(check.strength, check.spacing).max(axis=0)
+    bare = ((check.state.v["A_s"] <= 0) & (check.strength > 1)).any(axis=0)
     for number, band in enumerate(check.bands):
         what = "no stirrups" if math.isinf(band.spacing) else f"{band.spacing:g} mm"
         place = f"{band.start / 1000:.2f} to {band.end / 1000:.2f} m"
-        most = float(use[check.owners == number].max(initial=0.0))
+        own = check.owners == number
+        most = float(use[own].max(initial=0.0))
         used = f"used to {100 * most:.0f} % at most" if math.isfinite(most) else "NOT allowed"
+        used = "NO resistance where no bars in tension count" if bare[own].any() else used
         yield f"{place}: {what}, as given; {used}."
 
 

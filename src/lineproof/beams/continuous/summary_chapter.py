@@ -179,7 +179,7 @@ def _record_envelopes(design: Design) -> None:
     for number, part in enumerate(in_figures(moments), start=1):
         _figure(sheet, f"moments-{number}", moment_figure(design.outline, part), ALONG, rests)
     for number, each in enumerate(in_figures(shears), start=1):
-        figure = shear_figure(design.outline, each, stations=_critical(design))
+        figure = shear_figure(design.outline, each, stations=_critical(design), own=_own(design))
         _figure(sheet, f"shears-{number}", figure, ALONG + 1, rests)
     shapes = deflection_shapes_figure(design)
     if shapes is not None:
@@ -203,6 +203,17 @@ def _critical(design: Design) -> list[float]:
         for s in row
         if s.place != "station"
     ]
+
+
+def _own(design: Design) -> dict[float, float]:
+    """Return V_r of the sections that have one where that along the beam begins to be none."""
+    sheet, axes = design.model.sheet, design.outline.axes
+    made = {}
+    for section in (s for row in design.stirrups.sections for s in row):
+        V_r = sheet.entries_of(section.key).get("V_r")
+        if V_r is not None:
+            made[axes[section.span - 1] + section.demand.x] = float(V_r.value)
+    return made
 
 
 def _record_stations(model: Model) -> None:
