@@ -128,6 +128,6 @@ def test_long_chains_break_and_keep_their_text() -> None:
     chain = Chain(formula_math(parse_expression("M_r"), Notation([])), (long,))
     laid = fitted(chain)
 
-    assert "".join(p.alt for p in laid.pieces) == plain(long)
+    assert "".join(plain(p.math) for p in laid.pieces) == plain(long)
     assert all(width(p.math) <= WORKING_WIDTH for p in laid.pieces)
     assert all(p.scale == "1" for p in laid.pieces)

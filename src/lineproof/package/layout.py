@@ -9,7 +9,6 @@ from lineproof.typeset.chains import Chain
 from lineproof.typeset.glyphs import printable
 from lineproof.typeset.measure import broken, shrink, width
 from lineproof.typeset.nodes import Math, row
-from lineproof.typeset.plain import plain
 from lineproof.typeset.rows import PrintedRow
 
 WORKING_WIDTH = 33.0
@@ -26,7 +25,6 @@ class Piece:
     """A stretch of mathematics that stays on one line; ``scale`` below 1 makes it smaller."""
 
     math: Math
-    alt: str
     scale: str
 
 
@@ -98,7 +96,7 @@ def fitted_result(math: Math) -> tuple[Piece, ...]:
 
 
 def _piece(math: Math, room: float) -> Piece:
-    return Piece(math, plain(math), f"{shrink(math, room):.3g}")
+    return Piece(math, f"{shrink(math, room):.3g}")
 
 
 def cut(text: str, longest: int) -> str:

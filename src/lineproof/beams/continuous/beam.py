@@ -40,8 +40,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
-from lineproof.beams.continuous.resistance_cover import Gap, covered
-from lineproof.beams.continuous.resistance_station import COVERAGE
+from lineproof.beams.continuous.resistance_cover import COVERAGE, Gap, covered
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary

@@ -6,9 +6,9 @@ the bars must lap, fit and be what may be given.
 
 from __future__ import annotations
 
-import re
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
+from itertools import product
 
 import numpy as np
 
@@ -30,10 +30,14 @@ from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import Standing, provide, stand
 from lineproof.beams.continuous.resistance_cover import (
     COUNT,
+    COVERAGE,
+    FACES,
     ROUND_OFF,
     Coverage,
     Gap,
+    gap_key,
     ratios,
+    worst_key,
     worst_of,
     yield_force,
 )
@@ -43,8 +47,6 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3 import flexure
 from lineproof.standards.a23_3.bars import BARS
 
-_OWN = re.compile(r"coverage-gap-(\d+)")
-_WORST = re.compile(r"coverage-(bottom|top)(-tension)?")
 _MOST_BARS = 8
 FROM = "from the axis of support 1"
 _LAYERS = (1, 2)
@@ -59,14 +61,16 @@ _NAMES = ("f_c", "f_y", "phi_c", "phi_s", "b", "d", "h", "b_w", "M_f")
 def gap_of(design: Design, check: Entry) -> Gap | None:
     """Return the gap in the bars along the beam whose worst station a check stands for."""
     key = check.part.key
-    own, worst = _OWN.fullmatch(key), _WORST.fullmatch(key)
-    if own is None and worst is None:
+    if not key.startswith(COVERAGE):
         return None
     found = design.coverage
-    if own is not None:
-        return found.gaps[int(own[1]) - 1]
-    assert worst is not None  # one of the two  # noqa: S101
-    return _around(found, "bottom" if worst[1] == "bottom" else "top", tension=bool(worst[2]))
+    for number, gap in enumerate(found.gaps, 1):
+        if key == gap_key(number):
+            return gap
+    for face, tension in product(FACES, (False, True)):
+        if key == worst_key(face, tension=tension):
+            return _around(found, face, tension=tension)
+    return None
 
 
 def _around(found: Coverage, face: Face, *, tension: bool) -> Gap | None:

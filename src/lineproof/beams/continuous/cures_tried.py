@@ -8,8 +8,7 @@ from typing import Any
 
 from lineproof.beams.continuous.deflection_service import DEFLECTION
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance_cover import Gap
-from lineproof.beams.continuous.resistance_station import COVERAGE
+from lineproof.beams.continuous.resistance_cover import COVERAGE, Gap
 from lineproof.errors import UserError
 from lineproof.record import Entry, Part
 from lineproof.record.entry import CHECK

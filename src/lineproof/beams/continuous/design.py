@@ -8,7 +8,7 @@ chosen, then the bars are asked whether they still cover every case with these s
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, replace
 from functools import cached_property
 from itertools import count
 from typing import Any
@@ -71,8 +71,6 @@ class Design:
     designed: Designed
     runs: tuple[BarRun, ...]
     stirrups: Choice
-    beside: Mapping[int, BarLayers] = field(default_factory=dict)
-    """Of spans whose largest moment no given bars cross: the nearest of their bottom bars."""
     raised: tuple[str, ...] = ()
     """Bars that torsion, or shear at a girder, asks for beyond what the moments do, in words."""
 
@@ -95,6 +93,10 @@ class Design:
     def bottom_bars(self, span: int) -> BarLayers:
         """Return the bottom bars where the moment of a span is largest; () where none stand."""
         return layers_of(self.bottom[span]) if span in self.bottom else ()
+
+    def bottom_beside(self, span: int) -> BarLayers:
+        """Return the bottom bars nearest to the largest moment of a span that none cross."""
+        return beside_gap(self.runs, self.outline, span, sag_at(self.designed, span))
 
     def top_bars(self, face: Face) -> TopBars | None:
         """Return the top bars of a face: those of its support, given ones as they stand there."""
@@ -183,7 +185,7 @@ def _designed(
     if before is not None:
         designed = replace(before.designed, bars=bars, torsion={})
     designed, laid, choice = _laid(model, designed, runs)
-    return Design(model, pair, bottom, top, designed, laid, choice, beside)
+    return Design(model, pair, bottom, top, designed, laid, choice)
 
 
 def _laid(

@@ -74,7 +74,9 @@ def record_sag(design: Design, span: int) -> None:
         with sheet.part(f"{key}-beside", f"Span {span}: depth to the bottom bars beside the gap"):
             sheet.stand_for(begin(model, span, "b_w").place)
             holder = design.designed.bars.holders
-            counts = {"d": record_depth_beside(sheet, inputs.stirrup, design.beside[span], holder)}
+            counts = {
+                "d": record_depth_beside(sheet, inputs.stirrup, design.bottom_beside(span), holder)
+            }
     with sheet.part(key, f"Span {span}: moment in the span"):
         steps = begin(model, span, "b_f" if inputs.slab else "b_w")
         near = nearer(model, demand)

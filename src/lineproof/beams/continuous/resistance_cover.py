@@ -245,6 +245,15 @@ def worst_of(found: Coverage, face: Face, *, tension: bool) -> Station:
     return max((s for s in stations if s.face == face), key=ratio)
 
 
+COVERAGE = "coverage"
+"""With what the keys of all parts of the cover begin."""
+
+
 def gap_key(number: int) -> str:
     """Return the key of the part of a gap, counted from 1 as in ``Coverage.gaps``."""
-    return f"coverage-gap-{number}"
+    return f"{COVERAGE}-gap-{number}"
+
+
+def worst_key(face: Face, *, tension: bool) -> str:
+    """Return the key of the part of the station that a face's moment or tension uses most."""
+    return f"{COVERAGE}-{face}{'-tension' if tension else ''}"

@@ -13,6 +13,7 @@ from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.resistance import Standing, provide, stand
 from lineproof.beams.continuous.resistance_cover import (
     COUNT,
+    COVERAGE,
     FACES,
     Coverage,
     Gap,
@@ -21,12 +22,12 @@ from lineproof.beams.continuous.resistance_cover import (
     gap_key,
     ratio_of,
     ratios,
+    worst_key,
     worst_of,
     yield_force,
 )
 from lineproof.beams.continuous.resistance_demand import NOTHING, demand_at
 from lineproof.beams.continuous.resistance_station import (
-    COVERAGE,
     Laid,
     record_moment,
     record_tension,
@@ -68,14 +69,14 @@ def _record_worst(laid: Laid, found: Coverage, face: Face) -> Iterator[Station]:
     station = worst_of(found, face, tension=False)
     if station.M_f > NOTHING:
         title = f"{name}: the station that their moment uses most, span {station.span}"
-        record_moment(laid, station, f"{COVERAGE}-{face}", title)
+        record_moment(laid, station, worst_key(face, tension=False), title)
         if ratio_of(station.M_f, station.M_r) > 1:
             yield station
     station = worst_of(found, face, tension=True)
     if station.F <= NOTHING or (station.F_r <= 0 and station.M_f > NOTHING):
         return  # nothing asked, or the gap stands with the moment
     title = f"{name}: the station that their tension uses most, span {station.span}"
-    record_tension(laid, station, f"{COVERAGE}-{face}-tension", title)
+    record_tension(laid, station, worst_key(face, tension=True), title)
     if ratio_of(station.F, station.F_r) > 1:
         yield station
 

@@ -31,7 +31,6 @@ from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import flexure, shear_bars
 
-COVERAGE = "coverage"
 _NONE_STAND = (
     "No {face} bars stand from {start:.2f} to {end:.2f} m from the left axis of span {span}."
 )

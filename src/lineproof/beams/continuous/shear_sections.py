@@ -11,7 +11,8 @@ import numpy as np
 from lineproof.beams.continuous.forces import Demand, End, Forces
 from lineproof.beams.continuous.shear_check import SpanCheck, Spot, at_bearing
 from lineproof.beams.continuous.shear_numbers import SpanEnd
-from lineproof.beams.continuous.shear_state import LEAST_AREA, loads_near
+from lineproof.beams.continuous.shear_resistance import LEAST_AREA
+from lineproof.beams.continuous.shear_state import loads_near
 
 Place = Literal["d_v", "face", "station"]
 _MORE = 1 + 1e-9

@@ -36,7 +36,7 @@ from lineproof.beams.continuous.shear_numbers import (
     SpanNumbers,
     Stretch,
 )
-from lineproof.beams.continuous.shear_state import MOST_STRAIN
+from lineproof.beams.continuous.shear_resistance import MOST_STRAIN
 from lineproof.beams.continuous.stirrups_choice import Choice
 from lineproof.beams.continuous.torsion_inputs import span_torsion
 

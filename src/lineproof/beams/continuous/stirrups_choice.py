@@ -15,6 +15,7 @@ from lineproof.beams.continuous.layout import BeamOutline, StirrupZone
 from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.beams.continuous.shear_choice import RESERVE, choose_layouts, refuse_open
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanNumbers, check_basis
+from lineproof.beams.continuous.shear_resistance import LEAST_AREA
 from lineproof.beams.continuous.shear_sections import ShearSection, sections
 from lineproof.beams.continuous.shear_state import SpanState, span_state
 from lineproof.beams.continuous.stirrups import GRID, Band, SpanLayout
@@ -196,7 +197,7 @@ def _by_strength(state: SpanState, column: int, wider: float) -> str:
 def _standing(check: SpanCheck) -> Iterator[str]:
     """Say of each stretch of stirrups as given how much it is used."""
     use = np.maximum(check.strength, check.spacing).max(axis=0)
-    bare = ((check.state.v["A_s"] <= 0) & (check.strength > 1)).any(axis=0)
+    bare = ((check.state.v["A_s"] <= LEAST_AREA) & (check.strength > 1)).any(axis=0)
     for number, band in enumerate(check.bands):
         what = "no stirrups" if math.isinf(band.spacing) else f"{band.spacing:g} mm"
         place = f"{band.start / 1000:.2f} to {band.end / 1000:.2f} m"
