@@ -23,8 +23,9 @@ from lineproof.drawing.paper import FIT_MARGIN
 TOP_ROW = 5.0
 """Where the rows of top bars begin over the beam, mm on paper."""
 BUBBLE = 2.4
-NOTE, LINE = 2.6, 3.6
-"""Size of the notes and the distance of their lines, mm on paper."""
+NOTE = 2.6
+NOTE_LINES = {1: (16.5, 3.6), 2: (16.5, 3.6), 3: (15.6, 3.3)}
+"""How far below the bars the first of so many notes stands and the next follows, mm on paper."""
 Section = tuple[str, float]
 """Letter of a section and its station [mm]."""
 
@@ -80,9 +81,9 @@ def elevation_figure(
         *zones,
         *draw_rows(seen, rows_down, lows),
         *_spans(seen, floor),
-        *_notes(seen, notes, floor - 16.5),
+        *_notes(seen, notes, floor),
     ]
-    bottom = max(24.0, 18.2 + LINE * (len(notes) - 1)) - floor
+    bottom = 24.0 - floor
     return Figure(
         PAGE_WIDTH,
         round(bottom + ceiling + 2 * BUBBLE + 1.5, 1),
@@ -156,9 +157,10 @@ def _note_lines(seen: View, detailing: Detailing, short: Sequence[Short]) -> lis
     return [*lines, SHORT] if shown(seen, short) else lines
 
 
-def _notes(seen: View, lines: Sequence[str], height: float) -> list[Shape]:
+def _notes(seen: View, lines: Sequence[str], floor: float) -> list[Shape]:
+    first, step = NOTE_LINES[len(lines)]
     return [
-        Text(seen.at(1.0, height - LINE * number), words(line), "text", NOTE, "start")
+        Text(seen.at(1.0, floor - first - step * number), words(line), "text", NOTE, "start")
         for number, line in enumerate(lines)
     ]
 
