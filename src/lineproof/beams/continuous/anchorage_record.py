@@ -196,7 +196,9 @@ def _record_general(steps: Steps, designed: Designed, symbol: str) -> None:
     sheet, stirrups = steps.sheet, designed.basis.stirrups
     steps.lines(development.CENTRES, development.TO_SURFACE, development.D_CS)
     if math.isinf(stirrups.spacing):
-        steps.bind(K_tr=sheet.given("K_tr", "0 mm", source="no stirrups all along the beam"))
+        steps.bind(
+            K_tr=sheet.given("K_tr", "0 mm", source="stirrups do not stand all along the beam")
+        )
         steps.line(development.GENERAL, symbol)
         return
     spacing = sheet.given("s", plain(stirrups.spacing, "mm"), source="largest along the beam")

@@ -86,7 +86,6 @@ def section_at(
         *outline(shape, shown),
         *stirrup_shapes(steel),
         *drawn,
-        *_missing(shape, shown, steel),
         *_dimensions(shape, shown, steel, first, tension, [circle for _, circle in circles]),
         *_callouts(shape, shown, left, way=-1.0),
         *_callouts(shape, shown, right, way=1.0),
@@ -149,18 +148,6 @@ def sections_of(
     return tuple(found)
 
 
-def _missing(shape: SectionShape, shown: Shown, steel: Steel) -> list[Shape]:
-    """Say in the section of a face without bars that there are none."""
-    inset = 5.5 / shown.scale
-    rows: tuple[tuple[Face, float], ...] = (("bottom", inset), ("top", shape.h - inset))
-    faces = {run.face for run in steel.runs if run.place != "side face"}
-    return [
-        Text((shape.b_w / 2, y), words(f"no {face} bars"), "text", TEXT_SIZE)
-        for face, y in rows
-        if face not in faces
-    ]
-
-
 def _letter(number: int) -> str:
     """Return A to Z, then AA, AB; I and O are left out, as on drawings."""
     letters = "ABCDEFGHJKLMNPQRSTUVWXYZ"
@@ -188,7 +175,10 @@ Placed = Sequence[tuple[BarRun, Circle]]
 def _names(
     steel: Steel, web: Placed, flange: Placed, sides: Placed, *, all_left: bool
 ) -> tuple[list[Named], list[Named]]:
-    """Name bottom bars, side bars and stirrups at the left, top bars beside a flange right."""
+    """Name bottom bars, side bars and stirrups at the left, top bars beside a flange right.
+
+    A face without bars says so in their place.
+    """
     left: list[Named] = []
     right: list[Named] = []
     corner = min if all_left else max
@@ -201,6 +191,16 @@ def _names(
         else:
             target = corner(mine) if run.place == "web" else _near(mine, steel.outline.b_w)
             (left if all_left else right).append(Named(_label(run), target))
+    inset, faces = (
+        steel.cover + steel.stirrup,
+        {run.face for run in steel.runs if run.place != "side face"},
+    )
+    if "bottom" not in faces:
+        left.append(Named(words("no bottom bars"), (0.0, inset)))
+    if "top" not in faces:
+        at = 0.0 if all_left else steel.outline.b_w
+        named = Named(words("no top bars"), (at, steel.depth - inset))
+        (left if all_left else right).append(named)
     if steel.zone is not None:
         zone = steel.zone
         mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
