@@ -24,20 +24,27 @@ _PLACE = re.compile(r"\b(?:span|support)s? \d.*", re.IGNORECASE)
 class Told:
     """How the two states of a check are called, in the order in which the sentence tells them.
 
-    ``claimed_first`` tells the state with the changed values first; the state told last is the
-    one that matters, and the effects are sorted by it.
+    ``claimed_first`` tells the state with the claimed values first; the state told last is the
+    one that matters, and the effects are sorted by it. ``record_is_right`` tells that the record
+    holds the right values, so that it is worked again with those claimed; else with the right ones.
     """
 
     claimed: str
     right: str
     claimed_first: bool = True
+    record_is_right: bool = True
+
+    @property
+    def changed(self) -> str:
+        """How the state is called that the record has once it is worked with other values."""
+        return self.claimed if self.record_is_right else self.right
 
 
 CLAIMED = Told("as claimed", "with the right value")
 """Somebody's values against the record's: what is true once they are put right."""
 DRAWN = Told("as drawn", "in the calc", claimed_first=False)
 """Values of a drawing against the calc's: what is true of the beam that will be built."""
-RECORDED = Told("as recorded", "put right")
+RECORDED = Told("as recorded", "put right", record_is_right=False)
 """Values of the record against those that it should have."""
 
 
@@ -52,7 +59,7 @@ def effects_of(
     than :data:`UNSEEN`; one that only proves the calc by a second path does not. Checks that turn
     to fail come first, then those that turn to hold, then the rest by their change of utilisation.
     """
-    return _effects(graph, changed, told, recorded_is_right=True)
+    return _effects(graph, changed, told)
 
 
 def effects_of_right(graph: Graph, right: Mapping[str, float]) -> tuple[Effect, ...]:
@@ -60,12 +67,10 @@ def effects_of_right(graph: Graph, right: Mapping[str, float]) -> tuple[Effect, 
 
     ``claimed`` of an effect is as recorded, ``right`` with these values put in.
     """
-    return _effects(graph, right, RECORDED, recorded_is_right=False)
+    return _effects(graph, right, RECORDED)
 
 
-def _effects(
-    graph: Graph, changed: Mapping[str, float], told: Told, *, recorded_is_right: bool
-) -> tuple[Effect, ...]:
+def _effects(graph: Graph, changed: Mapping[str, float], told: Told) -> tuple[Effect, ...]:
     worked, titles = graph.worked(changed), _titles(graph)
     found = []
     for node in graph.checks():
@@ -74,7 +79,7 @@ def _effects(
         if node.id not in worked.truths and node.id not in worked.failed:
             continue
         other, recorded = worked.truths.get(node.id), graph.truth(node.id)
-        claimed, right = (other, recorded) if recorded_is_right else (recorded, other)
+        claimed, right = (other, recorded) if told.record_is_right else (recorded, other)
         found.append(_effect(claimed, right, told, node.id, _name(node, titles)))
     return tuple(sorted(filter(_matters, found), key=lambda effect: _order(effect, told)))
 
@@ -103,13 +108,12 @@ def turned_sentence(graph: Graph, changed: Mapping[str, float], told: Told = CLA
     if not turned:
         return ""
     titles = _titles(graph)
-    called = told.right if told is RECORDED else told.claimed
     said = [_turn(node, titles) for node in turned[:_MOST_TURNED]]
     more = len(turned) - _MOST_TURNED
     said += [f"and {more} more"] if more > 0 else []
     what = "a decision" if len(turned) == 1 else f"{len(turned)} decisions"
     return (
-        f"{called[:1].upper()}{called[1:]}, {what} of the calc would turn: {'; '.join(said)}. "
+        f"{told.changed.capitalize()}, {what} of the calc would turn: {'; '.join(said)}. "
         "Effects are told along the recorded branch only; the lines of the other are not in the "
         "calc."
     )

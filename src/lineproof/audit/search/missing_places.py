@@ -131,7 +131,11 @@ def _beam(calc: Calc) -> Iterator[Spot]:
 
 
 def _spans(calc: Calc) -> Iterator[Spot]:
-    return (Spot(f"span {k}", calc.under(f"sag-{k}")) for k in calc.member.sagging())
+    return (_span(calc, k) for k in calc.member.sagging())
+
+
+def _span(calc: Calc, number: int) -> Spot:
+    return Spot(f"span {number}", calc.under(f"sag-{number}"))
 
 
 def _deep_spans(calc: Calc) -> Iterator[Spot]:
@@ -142,9 +146,9 @@ def _deep_spans(calc: Calc) -> Iterator[Spot]:
 
 def _flanges(calc: Calc) -> Iterator[Spot]:
     if calc.value("h_f"):
-        for spot in _spans(calc):
-            if not spot.stopped:
-                yield Spot(spot.name, calc.under(f"interface-{spot.name.removeprefix('span ')}"))
+        for k in calc.member.sagging():
+            if not _span(calc, k).stopped:
+                yield Spot(f"span {k}", calc.under(f"interface-{k}"))
 
 
 def _overhangs(calc: Calc) -> Iterator[Spot]:
