@@ -6,7 +6,7 @@ factor 0.85; spans of 8 m and 6 m, loads of 4 and 5 kPa on 3 m.
 
 from __future__ import annotations
 
-from collections.abc import Container, Mapping
+from collections.abc import Iterable, Mapping
 from functools import cache
 
 from lineproof.audit.data import Claim, Interval, Slip, read_from
@@ -105,10 +105,14 @@ def slips(
     value: float,
     *,
     digits: int = 4,
-    claimed: Container[str] | None = None,
+    claimed: Iterable[str] | None = None,
     used: Mapping[str, Interval] | None = None,
+    texts: Mapping[str, str] | None = None,
 ) -> tuple[Slip, ...]:
-    """Return the slips behind a value claimed for a line of the beam, all lines being claimed."""
+    """Return the slips behind a value claimed for a line of the beam, all lines being claimed.
+
+    ``texts`` are numbers of other lines as they were typed.
+    """
     graph = beam()
-    whole = frozenset(graph.stored) if claimed is None else claimed
+    whole = dict.fromkeys(graph.stored if claimed is None else claimed, "") | dict(texts or {})
     return find_slips(graph, entry_id, used or {}, claim_of(graph, entry_id, value, digits), whole)

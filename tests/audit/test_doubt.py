@@ -103,6 +103,107 @@ def test_doubtful_lines_are_counted_apart_from_origins() -> None:
     assert sum("l_n (" in text for text in notes) == 1
 
 
+# -- how the author rounds ----------------------------------------------------------------------
+
+FORCES = {
+    "V_f = w_f*l/2": "kN",
+    "R_D = k_1*P_D": "kN",
+    "R_L = k_1*P_L": "kN",
+    "R_S = k_1*P_S": "kN",
+}
+POINTS = CLEAR | {"k_1": "1.1", "P_D": "239 kN", "P_L": "284 kN", "P_S": "353 kN"}
+"""V_f = 120.9, R_D = 1.1 x 239 = 262.9, R_L = 1.1 x 284 = 312.4, R_S = 1.1 x 353 = 388.3."""
+
+
+def forces_said(**claims: str) -> tuple[Verdict, str]:
+    record = sheet_of(FORCES, POINTS).close()
+    return said_of(record, {f"beam/{s}": text for s, text in claims.items()}, "beam/V_f")
+
+
+@pytest.mark.parametrize(
+    "others",
+    [
+        {"R_D": "260"},
+        {"R_D": "260", "R_L": "310"},
+        {"R_D": "260", "R_L": "310", "R_S": "388"},  # one is finer, two are as coarse
+    ],
+)
+def test_a_rounding_among_others_like_it_is_the_habit_of_its_author(
+    others: dict[str, str],
+) -> None:
+    """Whoever writes 262.9 as 260 and 312.4 as 310 writes 120.9 as 120, whatever l_n gives."""
+    verdict, note = forces_said(V_f="120", **others)
+    assert verdict is Verdict.SAFE_ROUNDING
+    assert note == (
+        "120.90 kN rounded down to a step of 10 kN: no check is moved by it; other numbers of the "
+        "table are rounded so too"
+    )
+
+
+@pytest.mark.parametrize(
+    "others",
+    [
+        {},
+        {"R_S": "388"},
+        {"R_D": "260", "R_L": "312", "R_S": "388"},  # two are finer, one is as coarse
+        {"R_D": "263"},
+        {"R_D": "220"},  # 42.9 off is no rounding
+    ],
+)
+def test_a_coarse_number_among_finer_ones_stays_doubtful(others: dict[str, str]) -> None:
+    assert forces_said(V_f="120", **others)[0] is Verdict.DOUBTFUL
+
+
+def test_the_same_slip_at_every_place_is_no_habit() -> None:
+    """V_fr is V_f again, with the same clear span for the span: both stay doubtful."""
+    record = sheet_of({"V_f = w_f*l/2": "kN", "V_f_2 = w_f*l/2": "kN"}, CLEAR).close()
+    both = {"beam/V_f": "120", "beam/V_f_2": "120"}
+    made = judged(record, both, find_slips)
+    assert {made[i].verdict for i in both} == {Verdict.DOUBTFUL}
+
+
+def test_two_digits_move_a_number_by_up_to_a_twentieth_where_all_have_two() -> None:
+    """1.1 x 104.5 = 114.95 is 110 for who writes 262.9 as 260; alone nobody rounds so far."""
+    record = sheet_of(FORCES, POINTS | {"P_L": "104.5 kN"}).close()
+    alone = said_of(record, {"beam/R_L": "110"}, "beam/R_L")[0]
+    beside = said_of(record, {"beam/R_L": "110", "beam/R_D": "260"}, "beam/R_L")[0]
+    assert (alone, beside) == (Verdict.ORIGIN, Verdict.SAFE_ROUNDING)
+
+
+def test_cutting_digits_off_is_a_habit_until_a_number_is_rounded_up() -> None:
+    """120.9 cut to 120: 262.9 cut to 262 goes with it, 353.8 rounded to 354 does not."""
+    record = sheet_of(FORCES, POINTS | {"k_1": "1.0", "P_D": "262.9 kN", "P_S": "353.8 kN"})
+    made = record.close()
+    cut = {"beam/V_f": "120", "beam/R_D": "262"}
+    assert said_of(made, cut, "beam/V_f")[0] is Verdict.SAFE_ROUNDING
+    assert said_of(made, cut | {"beam/R_S": "354"}, "beam/V_f")[0] is Verdict.DOUBTFUL
+
+
+# -- which slips are set beside a reading --------------------------------------------------------
+
+
+def test_a_digit_typed_for_another_is_not_set_beside_a_rounding() -> None:
+    """450 for 453.15: with l typed 5.98 it is 450.1, and some digit gives almost any number."""
+    record = sheet_of({"M_f = w_f*l**2/8": "kN.m"}, {"w_f": "100.7 kN/m", "l": "6 m"}).close()
+    assert said_of(record, {"beam/M_f": "450"}, "beam/M_f")[0] is Verdict.SAFE_ROUNDING
+
+
+def test_a_row_that_is_the_same_by_rights_is_no_slip_when_copied() -> None:
+    """d_v 0.9 x 518.9 = 467.01 at both ends: 465 at one is not copied from 465 at the other.
+
+    Where the other is 464.9 by rights, 465 in this row may well be that one.
+    """
+
+    def verdict(other: str) -> Verdict:
+        lines = {"d_v = 0.9*d_1": "mm", "d_vr = 0.9*d_2": "mm"}
+        record = sheet_of(lines, {"d_1": "518.9 mm", "d_2": other}).close()
+        claims = {"beam/d_v": "465", "beam/d_vr": "465"}
+        return said_of(record, claims, "beam/d_v")[0]
+
+    assert verdict("518.9 mm") is not Verdict.DOUBTFUL
+    assert verdict("516.6 mm") is Verdict.DOUBTFUL
+
+
 # -- readings that stay as they are ------------------------------------------------------------
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Container, Mapping
+from collections.abc import Mapping
 from functools import cache
 from typing import Any
 
@@ -131,7 +131,7 @@ def test_the_slip_finder_is_asked_for_origins_alone(record: Record) -> None:
 
     def find(
         graph: Graph, entry_id: str, used: Mapping[str, Interval], claim: Claim,
-        claimed: Container[str],
+        claimed: Mapping[str, str],
     ) -> tuple[Slip, ...]:  # fmt: skip
         asked.append((entry_id, used["beam/d"], "beam/d" in claimed))
         return (Slip("test", f"{graph.record.calc_id} {claim.typed}", claim.value, 1.0),)

@@ -109,15 +109,15 @@ class Cause:
     """What a slip may have been, in words such as ``h (1.4, overall depth) in place of d``.
 
     ``replaced`` and ``took`` are the ids of the value replaced and of the one taken for it, where
-    a value was put for another. ``miswritten`` tells that a right result was written wrongly,
-    ``above`` that it was made before the claimed line, where nobody claimed anything.
+    a value was put for another. ``above`` tells that it was made before the claimed line, where
+    nobody claimed anything, ``usual`` that it is a mistake known by name.
     """
 
     words: str
     replaced: str = ""
     took: str = ""
-    miswritten: bool = False
     above: bool = False
+    usual: bool = False
 
 
 @dataclass(frozen=True, slots=True)

@@ -18,11 +18,12 @@ from lineproof.beams.analysis.coefficients import (
     SHEAR,
     TWO,
 )
+from lineproof.standards.nbc.combinations import DEAD, LIVE
 
 _PART = re.compile(r"(?:sag-(?P<span>\d+)|(?:hog|shear)-(?P<at>\d+)-(?P<side>left|right))\Z")
 _CLEAR = re.compile(r"span-(\d+)\Z")
 _SINGLE = re.compile(r"[PQ]_|w_[DL]\d+_")
-_DEAD, _LIVE = 1.25, 1.5
+_DEAD, _LIVE = float(DEAD), float(LIVE)
 
 
 @dataclass(frozen=True, slots=True)

@@ -10,33 +10,44 @@ from collections.abc import Sequence
 
 from lineproof.audit.claims.other_methods import Other
 from lineproof.audit.data import Cause, Claim, Slip
+from lineproof.audit.graph import Graph
 
-PLAUSIBLE = 0.15
-"""Likelihood from which a slip is set beside a reading that is no error.
-
-Below it stand fits by chance: of any two numbers of three digits, some quantity of the beam put
-for another, or a digit typed for another, makes the one from the other.
-"""
 _SAME = 1e-6
 
 
 def plausible(
-    slips: Sequence[Slip], claim: Claim, way: Other | None = None
+    graph: Graph, slips: Sequence[Slip], claim: Claim, way: Other | None = None
 ) -> tuple[Slip, Cause] | None:
     """Return the likeliest slip that gives a claim to its last digit, and which of its causes.
 
-    None if there is none. A result written wrongly is left out: every rounding differs by some
-    digit from what it rounds. So is a slip in lines above that nobody claimed: there are so many
-    of them that one fits most numbers. And so is what is nothing but the other ``way``, which puts
-    its own values.
+    None if there is none. Only mistakes that a checker knows by name count, made in the line
+    itself: of slips that have as many ways as a number has digits, a place other quantities, or a
+    calc unclaimed lines, one fits most numbers. Nor does what is nothing but the other ``way``,
+    which puts its own values, or a copy of what is the same number by rights.
     """
-    likely = (s for s in slips if s.likely >= PLAUSIBLE and claim.stands_for.holds(s.value))
-    pairs = ((slip, cause) for slip in likely for cause in slip.causes)
-    return next((pair for pair in pairs if _counts(*pair, way)), None)
+    exact = (slip for slip in slips if claim.stands_for.holds(slip.value))
+    pairs = ((slip, cause) for slip in exact for cause in slip.causes)
+    return next(
+        (p for p in pairs if p[1].usual and not _is_same(graph, p[1], claim) and _counts(*p, way)),
+        None,
+    )
+
+
+def _is_same(graph: Graph, cause: Cause, claim: Claim) -> bool:
+    """Tell whether a value was taken for one that is the same by rights, so that no slip is told.
+
+    A row copied is the same where the two differ by less than the claim differs from its own.
+    """
+    if not cause.took or cause.replaced not in graph.stored:
+        return False
+    mine, theirs = graph.stored[cause.replaced], graph.stored[cause.took]
+    if cause.replaced == claim.id:
+        return abs(theirs - mine) < abs(claim.value - mine)
+    return math.isclose(mine, theirs, rel_tol=_SAME)
 
 
 def _counts(slip: Slip, cause: Cause, way: Other | None) -> bool:
-    if cause.above or cause.miswritten:
+    if cause.above:
         return False
     if way is None:
         return True

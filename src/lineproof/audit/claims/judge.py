@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Container, Iterator, Mapping, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
 from lineproof.audit.claims.doubt import first_of, plausible
+from lineproof.audit.claims.habit import is_habit, numbers_of
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
@@ -21,8 +22,10 @@ from lineproof.audit.graph import Graph, Node
 from lineproof.record.entry import DECISION
 from lineproof.typeset.values import told
 
-SlipFinder = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
-"""Looks for the slip behind a claim: graph, line, values used, claim, and the claimed ids."""
+SlipFinder = Callable[
+    [Graph, str, Mapping[str, Interval], Claim, Mapping[str, str]], tuple[Slip, ...]
+]
+"""Looks for the slip behind a claim: graph, line, values used, claim, and the table as typed."""
 
 WRONG = (Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN)
 """Verdicts whose values make those below carry something that is not right."""
@@ -30,6 +33,7 @@ MISWRITTEN = (Verdict.ORIGIN, Verdict.UNIT)
 """Verdicts on lines that may have been written wrongly and used rightly."""
 _DIGITS = 4
 _MOVED = 1e-9
+_HABIT = "other numbers of the table are rounded so too"
 _SIDES = {True: "conservative", False: "not conservative", None: "no check is moved by it"}
 
 
@@ -78,6 +82,7 @@ class _Judge:
     def __init__(self, graph: Graph, claims: Sequence[Claim], find: SlipFinder | None) -> None:
         self.graph, self.find = graph, find
         self.claims = {claim.id: claim for claim in claims}
+        self.typed = {claim.id: claim.typed for claim in claims}
         self.worker = Worker(graph)
         self.twins = twins_of(graph, self._deviating(), self.claims)
         self.worlds = self._worlds()
@@ -86,6 +91,7 @@ class _Judge:
         if self.worlds.sound is not self.worlds.claimed:
             self.benches.append(Bench(self.worker, self.worlds.sound, self.claims))
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
+        self.numbers = numbers_of(graph, claims, self.worlds)
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
@@ -247,22 +253,38 @@ class _Judge:
         if way is not None:
             read = replace(made, verdict=Verdict.OTHER_METHOD, note=way.sentence)
             return self._beside_a_slip(node, claim, read, way)
-        for rounded in coarse_roundings(claim, node.symbol, around):
-            safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
-            if rounded.usual or safe:
-                return self._rounded(node, claim, made, rounded, safe=safe)
+        rounded = self._as_rounded(node, claim, around, made)
+        if rounded is not None:
+            return rounded
         turned = self.turned.get(node.part)
         if turned:
             note = f"{self._turns(turned[-1])}, so that other expressions apply to this line"
             return replace(made, verdict=Verdict.UNKNOWN, note=note, causes=self._causes(node))
         return replace(made, verdict=Verdict.ORIGIN, slips=self._slips(node, claim))
 
+    def _as_rounded(
+        self, node: Node, claim: Claim, around: Sequence[Interval], made: Judged
+    ) -> Judged | None:
+        """Judge a claim that is a coarse rounding: as its author rounds, or for once."""
+        read = list(coarse_roundings(claim, node.symbol, around))
+        for rounded in (each for each in read if each.usual):
+            if is_habit(self.numbers, claim, node.symbol, rounded.step):
+                safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
+                said = self._rounded(node, claim, made, rounded, safe=safe)
+                return replace(said, note=f"{said.note}; {_HABIT}", slips=())
+        for rounded in (each for each in read if each.alone):
+            safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
+            if rounded.usual or safe:
+                said = self._rounded(node, claim, made, rounded, safe=safe)
+                return self._beside_a_slip(node, claim, said)
+        return None
+
     def _beside_a_slip(
         self, node: Node, claim: Claim, read: Judged, way: Other | None = None
     ) -> Judged:
         """Judge a line with a reading that is no error: doubtful where a slip is likely as well."""
         slips = self._slips(node, claim)
-        found = plausible(slips, claim, way)
+        found = plausible(self.graph, slips, claim, way)
         if found is None:
             return replace(read, slips=slips if read.verdict in WRONG else ())
         slip, cause = found
@@ -288,15 +310,12 @@ class _Judge:
         shown = self._shown(node, rounded.of, _DIGITS + 1)
         note = f"{shown} rounded {way} to a step of {told(rounded.step, claim.unit)}"
         verdict = Verdict.UNSAFE_ROUNDING if safe is False else Verdict.SAFE_ROUNDING
-        said = _SIDES[safe]
-        return self._beside_a_slip(
-            node, claim, replace(made, verdict=verdict, note=f"{note}: {said}")
-        )
+        return replace(made, verdict=verdict, note=f"{note}: {_SIDES[safe]}")
 
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         if self.find is None:
             return ()
-        slips = self.find(self.graph, node.id, self.used, claim, frozenset(self.claims))
+        slips = self.find(self.graph, node.id, self.used, claim, self.typed)
         return tuple(map(_without_underscore, slips))
 
     # -- what later lines carry ------------------------------------------------------------

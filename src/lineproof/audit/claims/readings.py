@@ -36,8 +36,10 @@ _HALF = 0.5 + 1e-9
 """The nearest multiple is no farther than half a step."""
 _EXACT_DIGITS = 6
 _LARGE = 10**6
-_FARTHEST = 0.025
-"""Part of a value by which a rounding may move it; beyond it is no rounding."""
+_NEAR = 0.025
+"""Part of a value by which a rounding for once may move it."""
+_FARTHEST = 0.05
+"""Part of a value by which any rounding may move it: two digits move 105 to 110 or 100."""
 
 
 def unit_slip(claim: Claim, follows: Iterable[Interval]) -> Slip | None:
@@ -70,13 +72,16 @@ class Rounded:
     """A claim that may be a rounding: of what, to which step in its unit, up or down.
 
     ``usual`` tells the nearest multiple, and digits cut off behind the last one; another multiple
-    is taken by nobody but to be on the safe side.
+    is taken by nobody but to be on the safe side. ``alone`` tells that it may be a rounding even
+    where no other number of the sheet is rounded so: it moves the value little, and has fewer
+    digits.
     """
 
     of: float
     step: str
     up: bool
     usual: bool
+    alone: bool
 
 
 def coarse_roundings(claim: Claim, symbol: str, follows: Iterable[Interval]) -> Iterator[Rounded]:
@@ -87,19 +92,20 @@ def coarse_roundings(claim: Claim, symbol: str, follows: Iterable[Interval]) -> 
     the point says that the digit before it was worked out: 62.0 is no rounding of 61.1 to 62.
     """
     number = Decimal(claim.typed)
-    unit = _last_digit(claim)
+    unit = last_digit(claim)
     for interval in follows:
         of = interval.middle
         away = abs(claim.value - of)
-        if not of or away > _FARTHEST * abs(of) or not _is_simpler(number, of, claim.unit):
+        if not of or away > _FARTHEST * abs(of):
             continue
+        alone = away <= _NEAR * abs(of) and _is_simpler(number, of, claim.unit)
         for count in (1, *_steps(claim, symbol)):
             step = unit * count
             far = away / (float(step) * internal_factor(claim.unit))
             if number % step == 0 and far < 1:
                 up = abs(claim.value) > abs(of)
                 usual = far <= _HALF or (count == 1 and not up)
-                yield Rounded(of, _plain(step), up, usual)
+                yield Rounded(of, _plain(step), up, usual, alone)
 
 
 def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:
@@ -124,7 +130,7 @@ def _is_simpler(number: Decimal, of: float, unit: str) -> bool:
     return len(number.normalize().as_tuple().digits) < len(exact.as_tuple().digits)
 
 
-def _last_digit(claim: Claim) -> Decimal:
+def last_digit(claim: Claim) -> Decimal:
     """Return one unit of the last digit that a claim shows, in its unit."""
     half = claim.stands_for.half / internal_factor(claim.unit)
     return Decimal(1).scaleb(Decimal(2 * half * (1 + 1e-9)).adjusted())

@@ -13,10 +13,10 @@ from lineproof.audit.slips.scope import LOADS, Pairs, Scope
 from lineproof.audit.slips.tree import OPERATIONS, Pair, Place, Places, text_of
 from lineproof.formula.compiled import NOT_COMPUTED
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
+from lineproof.standards.nbc.combinations import FACTORS
 
 TOP = (0,)
 """The place of the result."""
-LOAD_FACTORS = ("1.25", "1.5", "1.4", "0.9")
 IN_METRES = {"mm": 1e3, "mm2": 1e6, "mm4": 1e12, "N": 1e3, "N.mm": 1e6, "MPa": 1e-3}
 """What one m, m2, m4, kN, kN.m and kPa are in internal units."""
 SUM, PRODUCT = ("+", "-"), ("*", "/")
@@ -27,7 +27,7 @@ class Edit(NamedTuple):
 
     ``far`` counts against it: by so much (natural logarithm) it is less likely than its family.
     ``swap`` are the ids of the value that is replaced and of the one that is taken for it, where
-    the edit puts a value for another; ``miswritten`` says that a result was written wrongly.
+    the edit puts a value for another.
     """
 
     family: str
@@ -37,7 +37,6 @@ class Edit(NamedTuple):
     words: Callable[[], str]
     far: float = 0.0
     swap: tuple[str, str] = ("", "")
-    miswritten: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -57,6 +56,13 @@ class Line:
     def is_load(self) -> bool:
         """Tell whether it is a load or what a load does."""
         return self.scope.units[self.node.id] in LOADS
+
+    def is_load_factor(self, at: int) -> bool:
+        """Tell whether a place is a load factor: 1.5*w_L is one, (gamma_c/2300)**1.5 none."""
+        place = self.places.places[at]
+        above = self.places.places[place.above].operation if place.above >= 0 else ""
+        is_factor = isinstance(place.tree, Number) and place.tree.text in FACTORS
+        return is_factor and self.is_load and above != "**"
 
     def pair(self, at: int) -> tuple[float, float]:
         """Return value and half width at a place."""
@@ -173,7 +179,7 @@ def _sign(line: Line, at: int) -> str:
 def _sort_of_factor(line: Line, at: int, factor: int) -> str:
     tree = line.places.places[factor].tree
     if isinstance(tree, Number):
-        if tree.text in LOAD_FACTORS and line.is_load:
+        if line.is_load_factor(factor):
             return "load factor"
         chain = _chain(tuple(line.places.places), at, ("*", "/"))
         near = [line.places.places[k].tree for k, _ in chain]

@@ -8,10 +8,10 @@ from functools import partial
 from lineproof.audit.graph import Node
 from lineproof.audit.slips.constants import LOAD_PAIRS, Other, of_constant
 from lineproof.audit.slips.digits import changed, swapped
-from lineproof.audit.slips.edits import LOAD_FACTORS, TOP, Edit, Line, workable
-from lineproof.formula.tree import Number, Tree
+from lineproof.audit.slips.edits import TOP, Edit, Line, workable
+from lineproof.formula.tree import Number
+from lineproof.standards.nbc.combinations import DEAD, LIVE
 
-DEAD, LIVE = "1.25", "1.5"
 ALL_LEFT_OUT = "every load factor left out, specified loads for factored ones"
 
 
@@ -26,7 +26,7 @@ def edits_of_numbers(line: Line) -> Iterator[Edit]:
 
 
 def _number(line: Line, at: int, text: str) -> Iterator[Edit]:
-    yield from _other_constants(line, (at,), text, is_load=line.is_load)
+    yield from _other_constants(line, (at,), text, is_load=line.is_load_factor(at))
     for typed in () if line.above else (*swapped(text), *changed(text)):
         words = partial("the constant {} mistyped as {}".format, text, typed)
         yield Edit("mistyped constant", (at,), float(typed), 0.0, words)
@@ -89,17 +89,10 @@ def _symbol_of(node: Node) -> str:
 
 def _service(line: Line) -> Iterator[Edit]:
     """Give a sum of factored loads with every factor left out, and with one put for another."""
-    if not line.is_load:
-        return
-    places = line.places.places
-    at = [k for k, place in enumerate(places) if _is_load_factor(place.tree)]
+    at = [k for k in range(len(line.places.places)) if line.is_load_factor(k)]
     if len(at) > 1:
         yield Edit("service", tuple(at), 1.0, 0.0, lambda: ALL_LEFT_OUT)
     for k in at:
         for other in {line.places.values[j] for j in at} - {line.places.values[k]}:
             words = partial("the load factor {:.4g} in place of {}".format, other, line.text(k))
             yield Edit("load factor", (k,), other, 0.0, words)
-
-
-def _is_load_factor(tree: Tree) -> bool:
-    return isinstance(tree, Number) and tree.text in LOAD_FACTORS

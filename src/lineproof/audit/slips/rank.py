@@ -94,7 +94,8 @@ def _slip(group: Group, claim: Claim) -> Slip:
 def _cause(fit: Fit) -> Cause:
     edit = fit.edit
     words = f"{edit.words()}{fit.where}"
-    return Cause(words, *edit.swap, miswritten=edit.miswritten, above=bool(fit.where))
+    usual = FAMILIES[edit.family].usual
+    return Cause(words, *edit.swap, above=bool(fit.where), usual=usual)
 
 
 class Group(NamedTuple):

@@ -34,16 +34,21 @@ def stem(symbol: str) -> str:
 
 
 class Pairs(dict[str, Pair]):
-    """Values by id with half the width of what they stand for; read from intervals when asked."""
+    """Values by id with half the width of what they stand for; read from intervals when asked.
 
-    def __init__(self, graph: Graph, used: Mapping[str, Interval]) -> None:
+    ``typed`` holds the numbers of those claimed as they were typed.
+    """
+
+    def __init__(
+        self, graph: Graph, used: Mapping[str, Interval], typed: Mapping[str, str]
+    ) -> None:
         super().__init__()
-        self.stored, self.used = graph.stored, used
+        self.stored, self.used, self.typed = graph.stored, used, typed
 
     def copied(self) -> Pairs:
         """Return a copy, in which a pair may be put without changing this one."""
         other = Pairs.__new__(Pairs)
-        other.stored, other.used = self.stored, self.used
+        other.stored, other.used, other.typed = self.stored, self.used, self.typed
         other.update(self)
         return other
 

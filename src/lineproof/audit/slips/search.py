@@ -3,14 +3,16 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Container, Iterator, Mapping, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
+from types import MappingProxyType
 
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.bindings import edits_of_arguments, edits_of_bindings
 from lineproof.audit.slips.carry import Carrier, Onward, fitting, may_reach, reach_of
 from lineproof.audit.slips.edits import TOP, Edit, Line, edits_of, words_of
+from lineproof.audit.slips.kinds import FAMILIES
 from lineproof.audit.slips.numbers import edits_of_numbers
 from lineproof.audit.slips.rank import Fit, ranked, shares
 from lineproof.audit.slips.scope import Pairs, Scope, scope_of
@@ -24,10 +26,10 @@ FARTHER = 0.1
 LOOSE, ROUNDED = 1.5, 0.006
 """At first fits are sought so many widths wide, and for the width that another value of three
 digits brings; then the width of each is worked out."""
-WIDE = frozenset(("degrees",))
-"""Families of which every edit is worked out with its width: cot of 36.1 radians is -0.1 to 0."""
-Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Container[str]], tuple[Slip, ...]]
-"""What :func:`find_slips` is: graph, line, values used, claim, claimed ids; gives the slips."""
+Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Mapping[str, str]], tuple[Slip, ...]]
+"""What :func:`find_slips` is: graph, line, values used, claim, numbers claimed; gives the slips."""
+NOTHING: Mapping[str, str] = MappingProxyType({})
+"""No number of a table: each line is searched up to the inputs."""
 MOST_KEPT = 400
 """Edits of so many lines are kept while one table of claims is searched."""
 
@@ -37,23 +39,24 @@ def find_slips(
     entry_id: str,
     used: Mapping[str, Interval],
     claim: Claim,
-    claimed: Container[str] = (),
+    claimed: Mapping[str, str] = NOTHING,
 ) -> tuple[Slip, ...]:
     """Return the single slips that reproduce a claim, the most plausible first, eight at most.
 
     ``used`` gives for every value of the graph what follows from the values that the claim itself
-    uses, in internal units; a value not in it is taken as recorded. The slip is sought in the
-    claimed line and in the lines between it and the ``claimed`` ones above. An empty tuple says
+    uses, in internal units; a value not in it is taken as recorded. ``claimed`` holds the numbers
+    of the table by id, as typed: the slip is sought in the claimed line and in the lines between it
+    and those above, and a digit misread is one of a number as it was typed. An empty tuple says
     that no single slip known here fits. For many claims of one table, :func:`searching` is
     quicker.
     """
-    return SlipSearch(graph, used).slips(entry_id, claim, claimed)
+    return SlipSearch(graph, used, claimed).slips(entry_id, claim)
 
 
 def searching() -> Find:
     """Return a :func:`find_slips` that keeps what it has worked out while graph and values stay.
 
-    The mapping ``used`` must not be changed between two calls.
+    The mappings ``used`` and ``claimed`` must not be changed between two calls.
     """
     kept: list[SlipSearch] = []
 
@@ -62,11 +65,12 @@ def searching() -> Find:
         entry_id: str,
         used: Mapping[str, Interval],
         claim: Claim,
-        claimed: Container[str] = (),
+        claimed: Mapping[str, str] = NOTHING,
     ) -> tuple[Slip, ...]:
-        if not kept or kept[0].graph is not graph or kept[0].used is not used:
-            kept[:] = [SlipSearch(graph, used)]
-        return kept[0].slips(entry_id, claim, claimed)
+        asked = graph, used, claimed
+        if not kept or any(a is not b for a, b in zip(kept[0].asked, asked, strict=True)):
+            kept[:] = [SlipSearch(*asked)]
+        return kept[0].slips(entry_id, claim)
 
     return find
 
@@ -80,7 +84,7 @@ def none_fits(graph: Graph, entry_id: str) -> str:
 class Tried:
     """The edits of a line with what each makes of the line, in the order of these values.
 
-    ``wide`` are those whose value moves far within the digits of an argument.
+    ``wide`` are those whose value moves far within the digits of an argument: each is worked out.
     """
 
     line: Line
@@ -111,11 +115,13 @@ class Target:
 class SlipSearch:
     """Finds the slips behind the claims of one table, made with the values ``used``.
 
-    Lines worked out for one claim are kept for the next.
+    ``claimed`` are its numbers by id, as typed. Lines worked out for one claim are kept for the
+    next.
     """
 
     graph: Graph
     used: Mapping[str, Interval]
+    claimed: Mapping[str, str]
     _pairs: Pairs = field(init=False, repr=False)
     _scope: Scope = field(init=False, repr=False)
     _carrier: Carrier = field(init=False, repr=False)
@@ -123,12 +129,17 @@ class SlipSearch:
     _above: dict[str, Tried | None] = field(default_factory=dict, init=False, repr=False)
 
     def __post_init__(self) -> None:
-        object.__setattr__(self, "_pairs", Pairs(self.graph, self.used))
+        object.__setattr__(self, "_pairs", Pairs(self.graph, self.used, self.claimed))
         object.__setattr__(self, "_scope", scope_of(self.graph))
         carrier = Carrier(self._scope, self._pairs, self._line)
         object.__setattr__(self, "_carrier", carrier)
 
-    def slips(self, entry_id: str, claim: Claim, claimed: Container[str] = ()) -> tuple[Slip, ...]:
+    @property
+    def asked(self) -> tuple[Graph, Mapping[str, Interval], Mapping[str, str]]:
+        """What it was made for."""
+        return self.graph, self.used, self.claimed
+
+    def slips(self, entry_id: str, claim: Claim) -> tuple[Slip, ...]:
         """Return the single slips that reproduce a claim, as :func:`find_slips` does."""
         line = _claimed_line(self._scope, self._pairs, entry_id)
         if line is None:
@@ -136,7 +147,7 @@ class SlipSearch:
         value, half = line.pair(0)
         target = Target(claim, half / abs(value) if value else 0.0, half)
         fits = list(_fits(_own(line, claim), target, None, 1.0, ""))
-        reach = reach_of(self._scope, entry_id, claimed)
+        reach = reach_of(self._scope, entry_id, self.claimed)
         for above, distance in (*reach.lines.items(), *reach.leaves.items()):
             onward = self._carrier.onward(reach, above)
             if onward is None or not may_reach(onward, self._pairs[above][0], *target.room):
@@ -244,7 +255,7 @@ def _tried(line: Line, edits: Sequence[Edit]) -> Tried:
             continue
     worked.sort(key=lambda pair: pair[0])
     ordered = [edit for _, edit in worked]
-    wide = [at for at, edit in enumerate(ordered) if edit.family in WIDE]
+    wide = [at for at, edit in enumerate(ordered) if FAMILIES[edit.family].wide]
     return Tried(line, ordered, [value for value, _ in worked], shares(edits), wide)
 
 

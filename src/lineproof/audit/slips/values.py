@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterator
-from decimal import Decimal
 from functools import partial
 from itertools import islice
 
@@ -15,18 +14,18 @@ from lineproof.audit.slips.kinship import SERVICE
 from lineproof.audit.slips.quantities import Other, other_quantities, other_quantity, shown
 from lineproof.audit.slips.scope import LOADS
 from lineproof.audit.slips.units import ways_of_units
-from lineproof.quantity.units import UNITS, internal_factor
+from lineproof.quantity.units import UNITS
 from lineproof.record.entry import GIVEN, LOOKUP
+from lineproof.standards.nbc.combinations import FACTORS
 
 FACTORED = tuple(
     (factor, f", factored by {factor:g}", f", its factor {factor:g} taken out")
-    for factor in (1.25, 1.5, 1.4)
+    for factor in map(float, FACTORS)
+    if factor > 1
 )
 """Load factors, and how it is said that one was used or taken out."""
 FIRST_DIGITS = 27
 """So many changes of digits are tried: nine for each of the first three."""
-WHOLE = 1e-6
-"""By so much the logarithm of one unit of a digit may differ from a whole number."""
 LARGEST_STRAIN = 0.05
 """A bare number below it may be a strain, of which the power of ten is easily lost."""
 
@@ -198,18 +197,9 @@ def _digits(line: Line, target: str, name: str) -> Iterator[Other]:
 
 def _read_as(line: Line, target: str) -> str:
     """Return the number that a value is read as: as it was claimed, else as it was printed."""
-    node, (value, half) = line.scope.graph[target], line.pairs[target]
-    factor = internal_factor(node.unit)
-    unit = math.log10(2 * half / factor) if half else 0.5
-    if abs(unit - round(unit)) < WHOLE:  # a claimed number stands for half of its last digit
-        number = Decimal(value / factor).quantize(Decimal(1).scaleb(round(unit)))
-        return written(f"{number:f}")
-    entry = node.entry
-    if node.kind != GIVEN:
-        return written(str(entry["printed"].get("result", "")))
-    # An input that was claimed otherwise is used as it was claimed, and read so.
-    as_ours = math.isclose(value, node.stored, rel_tol=WHOLE)
-    return written(str(entry.get("typed", "")) if as_ours else node.number_text(value))
+    entry = line.scope.graph[target].entry
+    ours = entry.get("typed") if entry["kind"] == GIVEN else entry["printed"].get("result")
+    return written(line.pairs.typed.get(target) or str(ours or ""))
 
 
 def _mistyped(line: Line, target: str, name: str, typed: str, number: str) -> str:

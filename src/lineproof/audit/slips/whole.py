@@ -15,6 +15,7 @@ from lineproof.audit.slips.units import ways_of_units
 from lineproof.audit.slips.values import others_by_kind
 from lineproof.errors import UserError
 from lineproof.quantity.units import internal_factor
+from lineproof.standards.nbc.combinations import DEAD, LIVE
 
 BY_ONE = 1.0
 """A last digit that is one off was hardly mistyped."""
@@ -126,7 +127,7 @@ def _spans_of(line: Line) -> list[str]:
 
 
 def _factored(line: Line) -> Iterator[Edit]:
-    """Give a sum of specified loads with 1.25 on the dead and 1.5 on the live ones."""
+    """Give a sum of specified loads with their factors on the dead and on the live ones."""
     if not line.is_load or not line.node.symbol.startswith(("w_s", "M_h", "M_m", "R_", "delta")):
         return
     places, total, half = line.places, 0.0, 0.0
@@ -139,12 +140,14 @@ def _factored(line: Line) -> Iterator[Edit]:
             if not is_live and not is_dead:
                 return
             seen.add(is_live)
-            factor = 1.5 if is_live else 1.25
+            factor = float(LIVE if is_live else DEAD)
             slope = places.with_place(at, places.values[at] * 2) - places.values[0]
             total += slope * factor
             half += abs(slope) * factor * 1e-4
     if seen:
-        words = partial("{}".format, "factored loads, 1.25 on dead and 1.5 on live, for specified")
+        words = partial(
+            "{}".format, f"factored loads, {DEAD} on dead and {LIVE} on live, for specified"
+        )
         yield Edit("service", TOP, total, line.pair(0)[1] * 1.5, words)
 
 
@@ -169,7 +172,7 @@ def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
             words = partial("the result {} written as {}".format, meant, number)
             far = BY_ONE if _by_one_in_the_last(meant, number) else 0.0
             # What the claim would be if the line's own value had met the same slip.
-            yield Edit(family, TOP, claim.value + off, half, words, far, miswritten=True)
+            yield Edit(family, TOP, claim.value + off, half, words, far)
 
 
 def _by_one_in_the_last(first: str, second: str) -> bool:

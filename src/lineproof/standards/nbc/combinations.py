@@ -45,13 +45,24 @@ class Case:
     companions: tuple[Companion, ...] = field(default_factory=tuple)
 
 
+DEAD, LIVE = "1.25", "1.5"
+"""Factors of dead and of live load where both add up, as written."""
 CASES = (
     Case(1, ("1.4",)),
-    Case(2, ("1.25", "0.9"), ("L", "1.5"), (Companion("S", "1.0"), Companion("W", "0.4"))),
+    Case(2, (DEAD, "0.9"), ("L", LIVE), (Companion("S", "1.0"), Companion("W", "0.4"))),
     Case(3, ("1.25", "0.9"), ("S", "1.5"), (Companion("L", "1.0", "0.5"), Companion("W", "0.4"))),
     Case(4, ("1.25", "0.9"), ("W", "1.4"), (Companion("L", "0.5", "0.5"), Companion("S", "0.5"))),
     Case(5, ("1.0",), ("E", "1.0"), (Companion("L", "0.5", "0.5"), Companion("S", "0.25"))),
 )
+FACTORS = tuple(
+    dict.fromkeys(
+        factor
+        for case in CASES
+        for factor in (*case.dead, *(case.principal[1:] if case.principal else ()))
+        if factor != "1.0"
+    )
+)
+"""Factors of dead and principal loads, as written."""
 SERVICE_CASES = (
     Case(1, ("1.0",), ("L", "1.0"), (Companion("W", "0.3"), Companion("S", "0.35"))),
     Case(2, ("1.0",), ("W", "1.0"), (Companion("L", "0.35", "0.15"), Companion("S", "0.35"))),
