@@ -26,7 +26,8 @@ from .planting_slips import Planted
 FOUND = (Verdict.ORIGIN, Verdict.UNIT)
 CALM = (Verdict.AGREES, Verdict.CARRIED)
 """What may be said of a line that was honestly worked and written."""
-READINGS = (Verdict.OTHER_METHOD, Verdict.SAFE_ROUNDING, Verdict.UNSAFE_ROUNDING)
+ROUNDINGS = (Verdict.SAFE_ROUNDING, Verdict.UNSAFE_ROUNDING)
+READINGS = (Verdict.OTHER_METHOD, *ROUNDINGS)
 """What is said of a number that has a reading besides a slip, where no likely slip fits."""
 FIRST = 3
 QUICK_EVERY = 3
@@ -39,7 +40,8 @@ class Tally:
 
     Some slips give by chance the number of another valid method, or a round one near the right
     value. ``doubtful`` are those told as such with the true slip named beside that reading,
-    ``not_told`` those that are called another way or a rounding, or doubtful for another slip.
+    ``rounded`` those left that are round numbers and called so, ``not_told`` all others: called
+    another way, a rounding though they are not round, or doubtful for another slip.
     """
 
     planted: Counter[str] = field(default_factory=Counter)
@@ -48,6 +50,7 @@ class Tally:
     claims: int = 0
     untouched: int = 0
     doubtful: list[str] = field(default_factory=list)
+    rounded: list[str] = field(default_factory=list)
     not_told: list[str] = field(default_factory=list)
     missed: list[str] = field(default_factory=list)
     false: list[str] = field(default_factory=list)
@@ -71,7 +74,8 @@ class Tally:
             f"three {self.told.total()} ({100 * self.share_told:.1f} %); {self.claims} claims, "
             f"{self.untouched} of them on untouched lines, false origins {len(self.false)}; "
             f"by chance another valid way or a round number: doubtful with the slip named "
-            f"{len(self.doubtful)}, not told {len(self.not_told)}"
+            f"{len(self.doubtful)}, called a round number {len(self.rounded)}, "
+            f"not told {len(self.not_told)}"
         )
 
     def another(self, slip: Planted, judged: Judged, what: str) -> bool:
@@ -80,8 +84,17 @@ class Tally:
             return False
         place = told_at(slip, judged)
         told = judged.verdict is Verdict.DOUBTFUL and place is not None and place <= FIRST
-        (self.doubtful if told else self.not_told).append(f"{what}{judged.note}")
+        kept = self.doubtful if told else self.rounded if _is_round(judged) else self.not_told
+        kept.append(f"{what}{judged.note}")
         return True
+
+
+def _is_round(judged: Judged) -> bool:
+    """Tell whether a number of three digits is round: it ends in 0, a size in millimetres in 5."""
+    if judged.claim is None or judged.verdict not in ROUNDINGS:
+        return False
+    digits = f"{float(judged.claim.typed):.2e}".partition("e")[0]
+    return digits.endswith("0") or (judged.claim.unit == "mm" and digits.endswith("5"))
 
 
 def measured(numbers: Iterable[int], seed: int = 0) -> tuple[Tally, Tally]:
@@ -170,7 +183,7 @@ def report(full: Tally, quick: Tally, *, faults: bool = False) -> str:
     for name, tally in (("full tables", full), ("quick tables", quick)):
         lines += ["", name, *tally.lines()]
         if faults:
-            for word in ("doubtful", "not_told", "missed", "false", "untold"):
+            for word in ("doubtful", "rounded", "not_told", "missed", "false", "untold"):
                 lines += [f"{word}: {line}" for line in getattr(tally, word)]
     return "\n".join(lines) + "\n"
 

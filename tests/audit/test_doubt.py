@@ -22,6 +22,7 @@ from lineproof.audit.slips.search import find_slips
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.record import Record
 from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import materials
 
 CLEAR = {"w_f": "40.3 kN/m", "l": "6 m", "l_n": "5.95 m", "V_r": "121 kN"}
 
@@ -177,6 +178,30 @@ def test_cutting_digits_off_is_a_habit_until_a_number_is_rounded_up() -> None:
     cut = {"beam/V_f": "120", "beam/R_D": "262"}
     assert said_of(made, cut, "beam/V_f")[0] is Verdict.SAFE_ROUNDING
     assert said_of(made, cut | {"beam/R_S": "354"}, "beam/V_f")[0] is Verdict.DOUBTFUL
+
+
+def test_forces_are_rounded_to_fives_only_by_habit() -> None:
+    """120.9 is 120 and 312.4 is 310 to the nearest five; 262.9 is 265 for who rounds so."""
+    record = sheet_of(FORCES, POINTS).close()
+    alone = said_of(record, {"beam/R_D": "265"}, "beam/R_D")[0]
+    fives = {"beam/R_D": "265", "beam/R_S": "390", "beam/R_L": "310"}
+    assert (alone, said_of(record, fives, "beam/R_D")[0]) == (
+        Verdict.ORIGIN,
+        Verdict.SAFE_ROUNDING,
+    )
+
+
+def test_an_exponent_is_no_load_factor() -> None:
+    """E_c = (3300 sqrt(40) + 6900) (2400/2300)^1.5 = 27 771 x 1.06592 = 29 602.
+
+    With 1.6 for the 1.5 it is 29 728: 29 700 is that, and no load factor stands there.
+    """
+    sheet = sheet_of({}, {"f_c": "40 MPa", "gamma_c": "2400 kg/m3"})
+    with sheet.part("materials", "Materials"):
+        sheet.line(materials.E_C_GENERAL)
+    made = judged(sheet.close(), {"materials/E_c": "29728"}, find_slips)["materials/E_c"]
+    assert made.verdict is Verdict.ORIGIN
+    assert all("1.6 (ACI" not in slip.sentence for slip in made.slips)
 
 
 # -- which slips are set beside a reading --------------------------------------------------------

@@ -42,20 +42,16 @@ def test_slips_of_every_kind_were_planted(tallies: tuple[Tally, Tally]) -> None:
 
 
 def test_every_origin_is_found(tallies: tuple[Tally, Tally]) -> None:
+    """In 100 % of the slips, but for those that give the number of another valid reading."""
     assert [line for tally in tallies for line in tally.missed] == []
 
 
-def test_hardly_a_slip_is_swallowed_by_another_reading(tallies: tuple[Tally, Tally]) -> None:
-    """Another valid method or a round number near the right one: told as doubtful, with the slip.
+def test_no_slip_is_swallowed_by_another_reading(tallies: tuple[Tally, Tally]) -> None:
+    """A slip that gives by chance what another valid way gives is doubtful, with the slip named.
 
-    Of the rest one in a thousand may be left. In quick tables most slips lie above the lines that
-    are claimed, where nothing tells them from a reading that fits: one in fifty.
+    Only a round number near the right one may be called that, as no mistake known by name gives it.
     """
-    full, quick = tallies
-
-    assert len(full.not_told) <= 0.001 * full.planted.total(), full.not_told
-    assert len(quick.not_told) <= 0.02 * quick.planted.total(), quick.not_told
-    assert len(full.doubtful) <= 0.005 * full.planted.total(), full.doubtful
+    assert [line for tally in tallies for line in tally.not_told] == []
 
 
 def test_no_untouched_line_is_called_wrong(tallies: tuple[Tally, Tally]) -> None:
@@ -65,16 +61,16 @@ def test_no_untouched_line_is_called_wrong(tallies: tuple[Tally, Tally]) -> None
 def test_the_true_slip_is_among_the_first_three(tallies: tuple[Tally, Tally]) -> None:
     full, quick = tallies
 
-    assert full.share_told >= 0.95, full.untold
+    assert full.share_told >= 0.9, full.untold
     assert quick.share_told >= 0.9, quick.untold
 
 
-def test_no_kind_of_slip_is_left_in_the_dark(tallies: tuple[Tally, Tally]) -> None:
-    """The share of a kind told, of those found; a digit misread in an argument is the weakest."""
+def test_every_kind_of_slip_is_told(tallies: tuple[Tally, Tally]) -> None:
+    """Nine in ten of each kind; a digit misread in an argument alone has as many ways as digits."""
     full, _ = tallies
     shares = {kind: full.told[kind] / full.found[kind] for kind in rows.KINDS}
 
-    assert {kind: share for kind, share in shares.items() if share < 0.75} == {}
+    assert {k: s for k, s in shares.items() if s < 0.9 and k != rows.DIGIT_IN} == {}
 
 
 # The planting itself, by hand ---------------------------------------------------------------------

@@ -36,15 +36,19 @@ class Number:
 
 @dataclass(frozen=True, slots=True)
 class Habit:
-    """A way of rounding: to a step of the unit, to so many digits, or by cutting digits off."""
+    """A way of rounding: to a step of the unit, to so many digits, or by cutting digits off.
+
+    Without ``digits`` its step is no digit: fives.
+    """
 
     step: Decimal | None
-    digits: int
+    digits: int | None
     cut: bool
 
     def made(self, number: Number) -> bool:
         """Tell whether a number was rounded so."""
-        return any(s == self.step or _digits(number.typed, s) == self.digits for s in number.steps)
+        kept = {_digits(number.typed, step) for step in number.steps} - {None}
+        return self.step in number.steps or self.digits in kept
 
     def broken(self, number: Number) -> bool:
         """Tell whether a number would be another one if it had been rounded so."""
@@ -52,8 +56,9 @@ class Habit:
             return False
         if self.cut:
             return number.up
-        by_step = self.step is not None and number.typed % self.step == 0
-        return not by_step and number.typed % _last_of(number.typed, self.digits) != 0
+        if self.step is not None and number.typed % self.step == 0:
+            return False
+        return self.digits is None or number.typed % _last_of(number.typed, self.digits) != 0
 
 
 def numbers_of(graph: Graph, claims: Iterable[Claim], worlds: Worlds) -> tuple[Number, ...]:
@@ -77,16 +82,18 @@ def is_habit(numbers: Iterable[Number], claim: Claim, symbol: str, step: str) ->
 
     It is where more of the other quantities are rounded so than are written otherwise though they
     are as large: who rounds a number rounds larger ones too. Those of the same unit tell; where
-    they tell nothing, the whole sheet does by its digits. The same quantity elsewhere does not
-    count: a slip made in every place is no habit.
+    they tell nothing, the numbers of the whole sheet that have as many digits before the point do.
+    The same quantity elsewhere does not count: a slip made in every place is no habit.
     """
     typed, width = Decimal(claim.typed), Decimal(step)
     digits, cut = _digits(typed, width), width == last_digit(claim)
     others = [n for n in numbers if n.quantity != stem(symbol)]
     same = [n for n in others if n.unit == claim.unit]
     made, broken = _counted(same, Habit(width, digits, cut), abs(typed))
-    if not made and not broken:
-        made, broken = _counted(others, Habit(None, digits, cut), Decimal(0))
+    if not made and not broken and digits is not None:
+        made, broken = _counted(
+            others, Habit(None, digits, cut), Decimal(1).scaleb(typed.adjusted())
+        )
     return made > broken
 
 
@@ -97,8 +104,10 @@ def _counted(numbers: Iterable[Number], habit: Habit, least: Decimal) -> tuple[i
     return len(made), len(broken)
 
 
-def _digits(number: Decimal, step: Decimal) -> int:
-    return number.adjusted() - step.adjusted() + 1
+def _digits(number: Decimal, step: Decimal) -> int | None:
+    """Return how many digits of a number a step leaves; none for a step of fives or 25."""
+    is_digit = step.normalize().as_tuple().digits == (1,)
+    return number.adjusted() - step.adjusted() + 1 if is_digit else None
 
 
 def _last_of(number: Decimal, digits: int) -> Decimal:

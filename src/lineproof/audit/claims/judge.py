@@ -8,6 +8,7 @@ from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
+from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import is_habit, numbers_of
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
@@ -90,6 +91,7 @@ class _Judge:
         self.benches = [self.claimed_bench]
         if self.worlds.sound is not self.worlds.claimed:
             self.benches.append(Bench(self.worker, self.worlds.sound, self.claims))
+        self.divided = divided_terms(self.claimed_bench)
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.numbers = numbers_of(graph, claims, self.worlds)
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
@@ -245,6 +247,11 @@ class _Judge:
         return tuple(i for i in causes if self.verdicts.get(i, Verdict.INPUT) in WRONG)
 
     def _unexplained(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        if node.id in self.divided:
+            *others, total = self.divided[node.id]
+            note = f"with {self._named(others)} it makes the right {self._named([total])}"
+            note = f"{note}: another division of the same sum"
+            return replace(made, verdict=Verdict.OTHER_METHOD, note=note)
         around = [made.follows, self.worlds.sound.follows[node.id].interval]
         slip = unit_slip(claim, around)
         if slip is not None:

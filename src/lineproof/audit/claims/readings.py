@@ -19,6 +19,8 @@ _NEAR_ONE = 3.0
 """Factors nearer to one, such as kip.ft for kN.m, are too easily met by chance."""
 _DIGIT_LESS = (10,)
 """Steps in units of the last digit that write one digit less: any number is rounded so."""
+_BY_HABIT = (5,)
+"""Steps to which only a whole sheet is rounded: moments to 5 kN.m."""
 _BUILT = (5, 10)
 """Steps for sizes and areas; a size is in whole millimetres, a deflection to a tenth is none."""
 _SIZE = 1.0
@@ -93,19 +95,21 @@ def coarse_roundings(claim: Claim, symbol: str, follows: Iterable[Interval]) -> 
     """
     number = Decimal(claim.typed)
     unit = last_digit(claim)
+    usual_steps = _steps(claim, symbol)
+    by_habit = () if not usual_steps else tuple(c for c in _BY_HABIT if c not in usual_steps)
     for interval in follows:
         of = interval.middle
         away = abs(claim.value - of)
         if not of or away > _FARTHEST * abs(of):
             continue
         alone = away <= _NEAR * abs(of) and _is_simpler(number, of, claim.unit)
-        for count in (1, *_steps(claim, symbol)):
+        for count in (1, *usual_steps, *by_habit):
             step = unit * count
             far = away / (float(step) * internal_factor(claim.unit))
             if number % step == 0 and far < 1:
                 up = abs(claim.value) > abs(of)
                 usual = far <= _HALF or (count == 1 and not up)
-                yield Rounded(of, _plain(step), up, usual, alone)
+                yield Rounded(of, _plain(step), up, usual, alone and count not in by_habit)
 
 
 def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:

@@ -95,9 +95,9 @@ _LOADS = {
 
 LOAD_PAIRS = (
     (1.2, 1.6, _ACI), (1.4, 1.7, "ACI 318 before 2002"), (1.35, 1.5, _EC),
-    (1.5, 1.25, "the two exchanged"),
+    (1.5, 1.25, "the two exchanged"), (1.4, 1.4, "one factor for the whole"),
 )  # fmt: skip
-"""Factors of dead and of live load that other documents use together."""
+"""Factors of dead and of live load that are used together elsewhere."""
 
 BY_SYMBOL: dict[str, tuple[Other, ...]] = {
     "phi_c": _others((0.6, _94), (0.7, "precast, 16.1.3"), (0.75, "shear, ACI 318M"),

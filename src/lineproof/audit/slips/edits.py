@@ -266,10 +266,9 @@ def _power(line: Line, at: int, place: Place) -> Iterator[Edit]:
         family = "root" if other in (usual, 1.0) else "power"
         said = partial("the power {:.3g} of {} in place of {:.3g}".format, other, text, exponent)
         metre = line.metre(line.places.places[place.below[0]].tree)
-        for unit in dict.fromkeys((metre, 1.0)):
-            value = base**other * unit ** (exponent - other)
-            spread = abs(other * value / base) * half if base else half
-            yield Edit(family, (at,), value, spread, said)
+        value = base**other * metre ** (exponent - other)
+        spread = abs(other * value / base) * half if base else half
+        yield Edit(family, (at,), value, spread, said)
 
 
 def _call(line: Line, at: int, place: Place) -> Iterator[Edit]:

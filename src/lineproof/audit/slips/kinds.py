@@ -54,6 +54,7 @@ FAMILIES: dict[str, Family] = {
     "tributary": Family("half or full tributary width", 2.0, usual=True),
     "simple span": Family("simple span for continuous", 2.0, usual=True),
     "coefficient": Family("coefficient in place of the analysis", 0.4),
+    "thumb": Family("rule of thumb", 0.8),
     "centreline": Family("centreline for face", 2.0, usual=True),
     # constants
     "edition": Family("constant of another edition or standard", 1.0, usual=True),

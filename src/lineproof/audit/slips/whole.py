@@ -11,6 +11,7 @@ from lineproof.audit.slips.digits import changed, swapped, written
 from lineproof.audit.slips.edits import TOP, Edit, Line, words_of, workable
 from lineproof.audit.slips.quantities import shown
 from lineproof.audit.slips.scope import LOADS, is_next
+from lineproof.audit.slips.thumb import rules_of_thumb
 from lineproof.audit.slips.units import ways_of_units
 from lineproof.audit.slips.values import others_by_kind
 from lineproof.errors import UserError
@@ -33,6 +34,7 @@ def edits_of_result(line: Line) -> Iterator[Edit]:
             family = "result factored" if other.family == "factored" else other.family
             yield other._replace(family=family).edit(TOP, line.node.id)
     yield from workable(_factored(line))
+    yield from rules_of_thumb(line)
 
 
 def edits_of_copy(line: Line, claim: Claim) -> Iterator[Edit]:

@@ -1,0 +1,80 @@
+"""Short cuts of hand calculations, by hand, on a beam of the shape of ``hand``.
+
+d 540, A_s 1200, f_y 400, phi_s 0.85: the force is 408 kN.
+"""
+
+from __future__ import annotations
+
+import pytest
+
+from lineproof.audit.data import Slip
+from lineproof.audit.graph import Graph
+from lineproof.audit.slips.search import find_slips
+from lineproof.sheet import Sheet
+
+from .hand import typed
+
+GIVENS = {
+    "phi_s": "0.85", "A_s": "1200 mm2", "f_y": "400 MPa", "d": "540 mm", "a": "65 mm",
+    "a_r": "62 mm", "alpha_1": "0.805", "phi_c": "0.65", "f_c": "30 MPa", "b": "400 mm",
+    "M_sn": "-361.5 kN.m", "V_sn": "229.2 kN", "x_f": "225 mm", "w_f": "47.8 kN/m",
+    "w_D": "20.4 kN/m", "w_L": "14.9 kN/m", "M_f": "200 kN.m",
+}  # fmt: skip
+
+
+def slips(part: str, line: str, unit: str, text: str) -> tuple[Slip, ...]:
+    """Return the slips behind a number typed for a line of which all givens are claimed."""
+    sheet = Sheet("H2", "Short cuts")
+    symbol = line.partition(" ")[0]
+    with sheet.part("given", "Given"):
+        for name, value in GIVENS.items():
+            if name != symbol:
+                sheet.given(name, value)
+    with sheet.part(part, "Support 2, left face"):
+        sheet.line(line, unit=unit)
+    graph = Graph(sheet.close())
+    claimed = {i: "" for i in graph.nodes if i.startswith("given/")}
+    return find_slips(
+        graph, f"{part}/{symbol}", {}, typed(graph, f"{part}/{symbol}", text), claimed
+    )
+
+
+@pytest.mark.parametrize(
+    ("part", "line", "unit", "text", "says"),
+    [
+        # 408 x 0.9 x 0.540 = 198.288; with d - a/2 = 507.5 it is 207.06
+        ("beam", "M_r = phi_s*A_s*f_y*(d - a/2)", "kN.m", "198.29", "0.9d in place of d - a/2"),
+        # 361.5 - 229.2 x 0.45/3 = 327.12; at the face 361.5 - 51.57 + 1.21 = 311.14
+        ("hog-2-left", "M_f = -(M_sn + V_sn*x_f - w_f*x_f**2/2)", "kN.m", "327.12", "V*b/3"),
+        # 1.4 x (20.4 + 14.9) = 49.42; 1.25 x 20.4 + 1.5 x 14.9 = 47.85
+        ("beam", "w_f = 1.25*w_D + 1.5*w_L", "kN/m", "49.42", "one factor for the whole"),
+    ],
+)
+def test_a_short_cut_is_named_first(part: str, line: str, unit: str, text: str, says: str) -> None:
+    assert says in slips(part, line, unit, text)[0].sentence
+
+
+def test_steel_by_a_lever_arm_of_nine_tenths() -> None:
+    """M_f 200: 200e6/(0.85 x 400 x 0.9 x 540) = 200e6/165 240 = 1210.4; right is 1145.0.
+
+    0.805 x 0.65 x 30 x 400 x 62/340 = 6279 x 62/340 = 1145.0.
+    """
+    sheet = Sheet("H3", "Short cuts")
+    with sheet.part("given", "Given"):
+        for name, value in GIVENS.items():
+            if name not in ("M_f", "d"):
+                sheet.given(name, value)
+    with sheet.part("beam", "Span 1"):
+        sheet.given("M_f", "200 kN.m")
+        sheet.given("d", "540 mm")
+        sheet.line("A_sr = alpha_1*phi_c*f_c*b*a_r/(phi_s*f_y)", unit="mm2")
+    graph = Graph(sheet.close())
+    claim = typed(graph, "beam/A_sr", "1210.4")
+    found = find_slips(graph, "beam/A_sr", {}, claim, dict.fromkeys(graph.nodes, ""))
+    assert "M_f/(phi_s*f_y*0.9*d), a lever arm of 0.9d" in found[0].sentence
+
+
+def test_a_short_cut_is_not_told_where_the_quantities_are_not_about() -> None:
+    """The face of a support has M_sn, V_sn and x_f; a moment in a span has no third of a width."""
+    found = slips("sag-1", "M_f = V_sn*x_f - w_f*x_f**2/2", "kN.m", "327.12")
+    assert all("V*b/3" not in slip.sentence for slip in found)
