@@ -151,7 +151,7 @@ def test_where_no_bars_stand_the_failing_check_is_enough(gaps: Record) -> None:
     ("taken", "sentence"),
     [
         ("sag-2/crack-control",
-         "Crack control is checked for span 3 only, not for span 2."),
+         "Crack control is checked for span 1 and span 3 only, not for span 2."),
         ("hog-2-left/(strength|steel-for-moment)",
          "Moment resistance is checked at 5 places, not for support 2, left face."),
         ("sag-1/strength",
