@@ -94,13 +94,20 @@ def of_one_size(layers: BarLayers) -> bool:
 class TopBars:
     """Top bars of a section: a layer within the web, and how many bars stand in each overhang.
 
-    Those of the overhangs have the size of the web's but for ``overhang_size``.
+    Those of the overhangs have the size of the web's but for ``overhang_size``. Given bars may have
+    a second layer, ``upper``, within the web.
     """
 
     web: BarLayer
     overhang: int
     sides: int
     overhang_size: str = ""
+    upper: BarLayer | None = None
+
+    @property
+    def layers(self) -> BarLayers:
+        """The layers within the web, from the top inward."""
+        return (self.web,) if self.upper is None else (self.web, self.upper)
 
     @property
     def spread_size(self) -> str:
@@ -109,14 +116,20 @@ class TopBars:
 
     @property
     def of_one_size(self) -> bool:
-        """Tell whether all of them have one size."""
-        return self.web.thinner is None and self.spread_size == self.web.size
+        """Tell whether all of them have one size and stand in one layer."""
+        one = self.upper is None and self.web.thinner is None
+        return one and self.spread_size == self.web.size
+
+    @property
+    def outer_groups(self) -> tuple[BarLayer, ...]:
+        """The bars of the first layer by size, those of the overhangs last."""
+        spread = self.sides * self.overhang
+        return (*self.web.groups, *((BarLayer(spread, self.spread_size),) if spread else ()))
 
     @property
     def groups(self) -> tuple[BarLayer, ...]:
-        """The bars by size, those of the overhangs last."""
-        spread = self.sides * self.overhang
-        return (*self.web.groups, *((BarLayer(spread, self.spread_size),) if spread else ()))
+        """All bars by size, those of a second layer last."""
+        return (*self.outer_groups, *(() if self.upper is None else self.upper.groups))
 
     @property
     def area(self) -> float:
@@ -125,10 +138,11 @@ class TopBars:
 
     def __str__(self) -> str:
         """Show as written: ``4-20M, 2-20M in each overhang``."""
+        inside = bars_text(self.layers)
         if not self.overhang:
-            return str(self.web)
+            return inside
         where = "each overhang" if self.sides > 1 else "the overhang"
-        return f"{self.web}, {self.overhang}-{self.spread_size} in {where}"
+        return f"{inside}, {self.overhang}-{self.spread_size} in {where}"
 
 
 def bars_text(layers: BarLayers) -> str:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.bars import BarLayers, bars_text, of_one_size, spaced
+from lineproof.beams.bars import BarLayers, bars_text, in_line, of_one_size, spaced
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -10,6 +10,9 @@ from lineproof.standards.a23_3 import bars
 
 BARS = "bars"
 COMPRESSION_BARS = "compression-bars"
+NOT_IN_LINE = (
+    "The bars of the second layer do not all stand in line with those of the first, as A23.1 asks."
+)
 TWO_SIZES = "The distance between them is taken as if all of a layer had the larger size."
 
 
@@ -30,8 +33,8 @@ def bars_inside(sheet: Sheet, layers: BarLayers, *, stirrup: str, origin: str) -
     Of layers with bars of two sizes only whether they fit, as if all were of the thicker size, and
     the depth of each layer to its thicker bars: area and depth of all have a part of their own.
     """
-    beside = "" if of_one_size(layers) else f" {TWO_SIZES}"
-    sheet.note("bars-text", f"Bottom bars: {bars_text(layers)}, {origin}.{beside}", title="Bars")
+    text = f"Bottom bars: {bars_text(layers)}, {origin}.{placed(layers)}"
+    sheet.note("bars-text", text, title="Bars")
     first = layers[0]
     sheet.lookup("d_bs", bars.BARS, stirrup, "d_b")
     sheet.lookup("r_s", bars.STIRRUP_BENDS, stirrup)
@@ -43,12 +46,20 @@ def bars_inside(sheet: Sheet, layers: BarLayers, *, stirrup: str, origin: str) -
     sheet.check(bars.FITS)
     if not of_one_size(layers):
         d_1 = sheet.line(bars.DEPTH_FIRST)
-        return d_1 if len(layers) == 1 else _record_fit_above(sheet, layers, origin, d_b)
+        return d_1 if len(layers) == 1 else record_fit_above(sheet, layers, origin, d_b)
     A_s1 = sheet.line(bars.AREA_OF_BARS, symbol="A_s1" if len(layers) > 1 else "", n_b=n_1)
     if len(layers) == 1:
         return sheet.line(bars.DEPTH_ONE_LAYER)
     d_1 = sheet.line(bars.DEPTH_FIRST)
     return _record_second_layer(sheet, layers, origin, (d_b, A_b, s_min, s_c, A_s1, d_1))
+
+
+def placed(layers: BarLayers) -> str:
+    """Say how bars of two sizes are taken, and that given bars do not stand in line."""
+    said = [] if of_one_size(layers) else [TWO_SIZES]
+    if not in_line(layers[0].count, layers[-1].count):
+        said.append(NOT_IN_LINE)
+    return "".join(f" {text}" for text in said)
 
 
 def for_distance(sheet: Sheet, symbol: str, number: int, given: Entry) -> Entry:
@@ -61,15 +72,18 @@ def for_distance(sheet: Sheet, symbol: str, number: int, given: Entry) -> Entry:
 def _record_second_layer(
     sheet: Sheet, layers: BarLayers, origin: str, first: tuple[Entry, ...]
 ) -> Entry:
-    _record_fit_above(sheet, layers, origin, first[0])
+    record_fit_above(sheet, layers, origin, first[0])
     made = sheet.part_entries
     sheet.line(bars.AREA_OF_BARS, symbol="A_s2", n_b=made["n_2"], A_b=made["A_b2"])
     sheet.line(bars.TOTAL_AREA)
     return sheet.line(bars.DEPTH_TWO_LAYERS)
 
 
-def _record_fit_above(sheet: Sheet, layers: BarLayers, origin: str, d_b: Entry) -> Entry:
-    """Record that a second layer fits, over bars of diameter d_b; return its depth."""
+def record_fit_above(sheet: Sheet, layers: BarLayers, origin: str, d_b: Entry) -> Entry:
+    """Record that a second layer fits, over bars of diameter d_b; return its depth.
+
+    Needs d_1, the depth of the first layer, in the open part.
+    """
     second = layers[1]
     d_b2 = sheet.lookup("d_b2", bars.BARS, second.size, "d_b")
     sheet.lookup("A_b2", bars.BARS, second.size, "A_b", title="area of one bar, layer 2")

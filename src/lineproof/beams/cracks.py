@@ -38,13 +38,18 @@ def cracks_inside(
     """Record z inside the open part, with the concrete in tension by ``area``."""
     largest = max(layers, key=lambda layer: layer.diameter)
     if largest is not layers[0]:
-        A_b = steps.sheet.part_entries.get("A_b2")  # recorded with the bars, if in this part
-        if A_b is None:
-            A_b = steps.sheet.lookup("A_b", bars.BARS, largest.size)
-        steps.bind(A_b=A_b)
+        steps.bind(A_b=_area_of(steps.sheet, largest.size))
     steps.lines(clause.STRESS_ALLOWANCE, clause.D_C, clause.D_S, clause.BAR_COUNT, area, clause.Z)
     steps.sheet.lookup("z_max", clause.LIMITS, exposure_kind(exposure))
     steps.check(clause.CRACKS)
+
+
+def _area_of(sheet: Sheet, size: str) -> Entry:
+    """Return the area of a bar: as recorded with bars of the open part, else looked up in it."""
+    known = (sheet.part_entries.get(symbol) for symbol in ("A_b2", "A_bo"))
+    area = bars.BARS.number(size, "A_b")
+    found = next((each for each in known if each is not None and each.value == area), None)
+    return sheet.lookup("A_b", bars.BARS, size) if found is None else found
 
 
 def skin_inside(steps: Steps, exposure: str) -> None:

@@ -157,9 +157,11 @@ def bar_of(designed: Designed, run: BarRun) -> Bar:
     spans = spans or [1 if run.end <= 0 else len(designed.outline.lengths)]
     h = max(designed.outline.depths[k - 1] for k in spans)
     if run.place == "overhang":
-        return Bar(run.face, "overhang", 1, run.size, run.number, h, room_beside(designed, spans))
+        met = zip(axes, designed.bars.top, strict=False)
+        number = max([run.number, *(top.overhang for x, top in met if run.start <= x <= run.end)])
+        return Bar(run.face, "overhang", 1, run.size, number, h, room_beside(designed, spans))
     layers = _layers_met(designed, run, spans)
-    beside = [layer[run.layer - 1].number for layer in layers if len(layer) >= run.layer]
+    beside = [layer[run.layer - 1].count for layer in layers if len(layer) >= run.layer]
     return Bar(run.face, "web", run.layer, run.size, spaced(max([run.number, *beside])), h)
 
 
@@ -231,7 +233,7 @@ def hook_at(
     basic = hooks.basic_length(designed.pair)
     d_b = BARS.number(size, "d_b")
     c_side = side_cover(designed, support)
-    c_tail = designed.end_cover
+    c_tail = designed.c_tail
     c_top = value(
         cover.COVER_TO_BARS, c_c=designed.outline.cover,
         d_bs=BARS.number(designed.basis.stirrups.size, "d_b"),

@@ -237,36 +237,46 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         (kept[i], kept[j])
         for i, j in sorted(level_pairs(designed, kept), key=lambda p: kept[p[1]].start)
     ]
-    seen: set[tuple[Bar, Bar, float, int]] = set()
+    seen: set[tuple[Bar, Bar, float, int, Bar]] = set()
     for first, second in pairs:
         thin, thick = sorted((first, second), key=lambda run: run.diameter)
         length = first.end - second.start
         beside = standing_at_lap(kept, first, second)
-        same = (bar_of(designed, thin), bar_of(designed, thick), length, beside)
+        widest = bar_of(designed, max(_at_lap(kept, first, second), key=lambda run: run.diameter))
+        same = (bar_of(designed, thin), bar_of(designed, thick), length, beside, widest)
         if same not in seen:
             seen.add(same)
-            _record_lap(writers, lengths, (thin, thick), (length, beside), len(seen))
+            laid = (length, beside, lengths[widest]["d_b"])
+            _record_lap(writers, lengths, (thin, thick), laid, len(seen))
 
 
 def standing_at_lap(runs: Sequence[BarRun], first: BarRun, second: BarRun) -> int:
     """Return how many bars stand in the layer at the middle of a lap; lapped ones count once."""
-    x = (first.end + second.start) / 2
-    layer = (first.face, first.layer, first.place)
-    there = [r for r in runs if (r.face, r.layer, r.place) == layer and r.start < x < r.end]
+    there = _at_lap(runs, first, second)
     twice = sum(min(there[i].number, there[j].number) for i, j in lap_pairs(there))
     return sum(run.number for run in there) - twice
+
+
+def _at_lap(runs: Sequence[BarRun], first: BarRun, second: BarRun) -> list[BarRun]:
+    """Return the runs of the layer at the middle of a lap."""
+    x = (first.end + second.start) / 2
+    layer = (first.face, first.layer, first.place)
+    return [r for r in runs if (r.face, r.layer, r.place) == layer and r.start < x < r.end]
 
 
 def _record_lap(
     writers: Writers,
     lengths: Lengths,
     sizes: tuple[BarRun, BarRun],
-    laid: tuple[float, int],
+    laid: tuple[float, int, Entry],
     number: int,
 ) -> None:
-    """Record a lap of a thinner with a thicker bar: its length, bars that stand beside."""
+    """Record a lap of a thinner with a thicker bar: its length, bars that stand beside.
+
+    The distances are those of bars that all have the size of the thickest in the layer.
+    """
     sheet, designed = writers.sheet, writers.designed
-    (thin, thick), (length, beside) = sizes, laid
+    (thin, thick), (length, beside, d_b) = sizes, laid
     unlike = thin.size != thick.size
     other = f" with {thick.size}" if unlike else ""
     with sheet.part(f"anchorage-lap-{number}", f"Lap of {thin.face} bars {thin.size}{other}"):
@@ -289,8 +299,8 @@ def _record_lap(
         pair = beside <= PAIR
         if thin.place == "web":
             n_b = sheet.given("n_b", str(max(beside, PAIR)), source=_AT_LAP)
-            steps.line(bar_clause.CLEAR, n_b=n_b)
-        steps.line(bar_clause.LEAST_CLEAR)
+            steps.line(bar_clause.CLEAR, n_b=n_b, d_b=d_b)
+        steps.line(bar_clause.LEAST_CLEAR, d_b=d_b)
         steps.line(laps.CLEAR_PAIR if pair else laps.CLEAR_CORNERS)
         if not steps.decide(laps.ROOM):
             sheet.note(
@@ -322,7 +332,7 @@ def record_hook(
         steps.line(hooks.SIDE_COVER_COLUMN)
     else:
         steps.line(hooks.SIDE_COVER)
-    steps.bind(c_tail=sheet.given("c_tail", plain(designed.end_cover, "mm"), source="as laid"))
+    steps.bind(c_tail=sheet.given("c_tail", plain(designed.c_tail, "mm"), source="as laid"))
     steps.line(hooks.FACE_COVER)
     side, tail = steps.decide(hooks.SIDE_COVERED), steps.decide(hooks.TAIL_COVERED)
     face = steps.decide(hooks.FACE_COVERED)

@@ -156,8 +156,11 @@ class ContinuousBeam:
         """Record bars and resistance at every span and both faces of every support."""
         self.sheet.need(*_BEFORE_DESIGN)
         design = self.design
-        sizes = [layer.size for chosen in design.bottom.values() for layer in layers_of(chosen)]
-        sizes += [top_of(chosen).web.size for chosen in design.top.values()]
+        if design.given:
+            sizes = [run.size for run in design.runs]
+        else:
+            sizes = [layer.size for made in design.bottom.values() for layer in layers_of(made)]
+            sizes += [top_of(made).web.size for made in design.top.values()]
         with self.sheet.chapter(FLEXURE_CALL, closing=self._cure):
             record_cover(self.sheet, self.inputs, sizes or [run.size for run in design.runs])
             for span in faces.sagging_spans(design.model):

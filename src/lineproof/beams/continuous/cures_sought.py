@@ -322,9 +322,13 @@ def beside_each_other(part: Part, use: Utilisation) -> tuple[Utilisation, Variab
 
 def _sizes_of(area: Entry) -> tuple[str, ...]:
     """Return the sizes of the bars that make up an area, the largest last."""
+    return _sizes_among(behind(area))
+
+
+def _sizes_among(entries: Iterable[Entry]) -> tuple[str, ...]:
     areas = {BARS.number(size, "A_b"): size for size in BARS.rows}
     found = {
-        e.value for e in behind(area)
+        e.value for e in entries
         if e.kind == LOOKUP and e.unit == "mm2" and e.value in areas
     }  # fmt: skip
     return tuple(areas[each] for each in sorted(found))
@@ -351,6 +355,13 @@ def _sizes(check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
     entries = behind(check)
     d_b = bound["d_b"]
     size = next(s for s in BARS.rows if BARS.number(s, "d_b") == d_b.value)
+    mixed = len(_sizes_among(entries)) > 1
+    if mixed and "A_s" in check.part.entries:
+        return None  # the area beside those of other sizes would change with it
+    fits = check.part.entries.get(_FITS)
+    if mixed:  # the area stays: it has a part of its own
+        beside = () if fits is None else behind(fits)
+        entries = [e for e in (*entries, *beside) if e.part is check.part]
     of_size = {e.id: e for e in (*entries, *d_b.part.entries.values()) if e.kind in VALUES}
     areas = tuple(
         e for e in of_size.values()
@@ -369,7 +380,6 @@ def _sizes(check: Entry, bound: Mapping[str, Entry]) -> Sought | None:
         k_4 = development.SIZE.number(other, "k_4")
         return made | {"d_b": diameter, "A_b": BARS.number(other, "A_b"), "k_4": k_4}
 
-    fits = check.part.entries.get(_FITS)
     return Sought(
         roots, find.bar_size(size), spread,
         lambda value: f"bars {_named(value)} of at least the same area",

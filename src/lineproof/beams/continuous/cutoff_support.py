@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 
 import numpy as np
 
@@ -91,14 +91,18 @@ def _given_width(writers: Writers, support: int) -> Entry:
     return writers.sheet.given("b_sp", plain(width, "mm"), source=f"support {support}")
 
 
-def _bind_support(writers: Writers, steps: Steps, support: int) -> None:
-    """Record and bind the width of an end support and the cover at the end of the bars."""
+def _bind_support(writers: Writers, steps: Steps, support: int, c_end: float) -> None:
+    """Record and bind the width of an end support and the concrete at the end of the bars [mm]."""
     steps.bind(
         b_sp=_given_width(writers, support),
-        c_end=writers.sheet.given(
-            "c_end", plain(writers.designed.end_cover, "mm"), source="as laid"
-        ),
+        c_end=writers.sheet.given("c_end", plain(c_end, "mm"), source="as laid"),
     )
+
+
+def _beyond(writers: Writers, support: int, runs: Iterable[BarRun]) -> float:
+    """Return the most concrete between bars that end in an end support and the end of the beam."""
+    low, high = writers.designed.outline.ends
+    return max(run.start - low if support == 1 else high - run.end for run in runs)
 
 
 def _fail(site: Site, test: object, symbol: str, nothing: str) -> None:
@@ -145,12 +149,15 @@ def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
         steps.bind(x_t=site.given("x_t", 0.0, "support axis"))
         demand = site.demand(0.0, int(np.abs(V).argmax()))
         site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
-        _bind_support(site.writers, steps, support)
+        half = half_of(designed, side.span, side.near)
+        _bind_support(site.writers, steps, support, half + side.t_kept)
         steps.line(clause.PAST_CENTRE)
         _, confined = support_shear(designed, side.span, side.near)
         steps.line(clause.LIMIT_CONFINED if confined else clause.LIMIT)
-        bent = [hooked[support, r.size] for r in side.kept if _hook(r, side.near)]
-        longest = max(bent, key=lambda e: e.value) if bent else site.longest(side.kept)["l_d"]
+        lengths = [hooked[support, r.size] for r in side.kept if _hook(r, side.near)]
+        straight = tuple(r for r in side.kept if not _hook(r, side.near))
+        lengths += [site.longest(straight)["l_d"]] if straight else []
+        longest = max(lengths, key=lambda e: e.value)
         steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=longest)
 
 
@@ -272,12 +279,14 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
                 place = record_hook(writers, {}, support, size, ties)
                 made[support, size] = place["l_dh"]
                 if designed.held(support):
-                    _record_fit(writers, Steps(sheet, place), support)
+                    bent = (run for run in runs if run.size == size and getattr(run, name))
+                    beyond = _beyond(writers, support, bent)
+                    _record_fit(writers, Steps(sheet, place), support, beyond)
     return made
 
 
-def _record_fit(writers: Writers, steps: Steps, support: int) -> None:
-    _bind_support(writers, steps, support)
+def _record_fit(writers: Writers, steps: Steps, support: int, c_end: float) -> None:
+    _bind_support(writers, steps, support, c_end)
     steps.line(hooks.AVAILABLE)
     steps.check(hooks.FITS)
 
@@ -343,12 +352,12 @@ def record_end_top(site: Site) -> None:
     support = support_of(side.span, side.near)
     straight = [run for run in side.runs if not _hook(run, side.near)]
     for number, size in enumerate(sorted({run.size for run in straight}), 1):
-        run = next(r for r in straight if r.size == size)
+        same = [run for run in straight if run.size == size]
         with sheet.part(
             f"anchorage-end-{support}-top-{number}",
             f"Top bars {size} at the face of support {support}",
         ):
-            steps = Steps(sheet, dict(site.bar(run)))
-            _bind_support(writers, steps, support)
+            steps = Steps(sheet, dict(site.longest(tuple(same))))
+            _bind_support(writers, steps, support, _beyond(writers, support, same))
             steps.line(hooks.AVAILABLE)
             steps.check(development.DEVELOPED)

@@ -39,6 +39,7 @@ from lineproof.beams.continuous.detailing_given import (
     bottom_places,
     read_given_runs,
     section_bars_of,
+    tail_cover,
     top_bars_at,
 )
 from lineproof.beams.continuous.developed import Developed, developed_at
@@ -165,6 +166,7 @@ def _designed(
     bare = Designed(
         basis, model.forces, none, pair, breadths=breadths,
         restrained=faces.restrained_supports(model),
+        tail_cover=tail_cover(basis.outline, runs or ()),
     )  # fmt: skip
     bottom = flexure_choice.choose_bottom(
         model, pair, bottom_given, asked.bottom,
@@ -318,7 +320,8 @@ def _as_chosen(top: LaidTop, model: Model) -> TopBars | None:
     if not top.web:
         return None
     beside = top.overhang // sides if sides else 0
-    return TopBars(top.web[0], beside, sides, top.overhang_size)
+    upper = top.web[1] if len(top.web) > 1 else None
+    return TopBars(top.web[0], beside, sides, top.overhang_size, upper)
 
 
 def _beside(
@@ -350,7 +353,7 @@ def _section_bars(
 
 
 def _laid_top(top: TopBars) -> LaidTop:
-    return LaidTop((top.web,), top.sides * top.overhang, top.overhang_size)
+    return LaidTop(top.layers, top.sides * top.overhang, top.overhang_size)
 
 
 def layers_of(chosen: Chosen) -> BarLayers:

@@ -5,6 +5,7 @@ Plain data in N, mm, MPa, degrees; ``x`` along the beam as in ``layout``.
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from functools import cached_property
@@ -131,7 +132,8 @@ class Designed:
     ``shear`` may be empty: then no stirrups are counted against the tension that shear leaves in
     the bars, and no bar is cut in a tension zone. ``breadths`` gives the width of a column across
     the beam by support number, where it is known. ``end_cover`` is the concrete outside of the
-    bars at the ends of the beam, ``stock`` the longest bar. ``end_forces`` [N] of 11.3.9.5 by
+    bars at the ends of the beam, ``tail_cover`` that outside of given hooks where it is less,
+    ``stock`` the longest bar. ``end_forces`` [N] of 11.3.9.5 by
     support number replace those found here. ``torsion`` is known, by span, where torsion counts:
     there the bottom bars run through. ``restrained`` holds the numbers of the end supports that are
     analysed as simple and designed for an assumed restraint.
@@ -144,6 +146,7 @@ class Designed:
     shear: tuple[ShearStretch, ...] = ()
     breadths: Mapping[int, float] = field(default_factory=dict)
     end_cover: float = END_COVER
+    tail_cover: float = math.inf
     stock: float = STOCK
     end_forces: Mapping[int, float] = field(default_factory=dict)
     torsion: Mapping[int, TorsionForces] = field(default_factory=dict)
@@ -153,6 +156,11 @@ class Designed:
     def outline(self) -> BeamOutline:
         """The concrete of the beam."""
         return self.basis.outline
+
+    @property
+    def c_tail(self) -> float:
+        """The concrete outside of the tails of hooks [mm]."""
+        return min(self.end_cover, self.tail_cover)
 
     @property
     def strengths(self) -> Strengths:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import re
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
@@ -194,9 +195,10 @@ def _fault_of_layer(row: list[BarRun], basis: Basis, x: float) -> str:
     clear = clear_distance(basis, bar)
     least = value(bar_clause.LEAST_CLEAR, d_b=thick.diameter, a_max=basis.strengths.a_max)
     if not holds(bar_clause.FITS, s_min=least, s_c=clear):
+        second = ", or a second layer" if thick.layer == 1 else ""
         return (
             f"{where}: {number} bars up to {thick.size} stand side by side, {clear:.0f} mm apart, "
-            f"at least {least:.0f} mm; write fewer bars there, or a second layer"
+            f"at least {least:.0f} mm; write fewer bars there{second}"
         )
     return ""
 
@@ -226,6 +228,13 @@ def _check_section(
                 f"stand at {x:.0f} mm from the axis of support 1; write a run of bars that passes "
                 "there, or fewer bars for the section"
             )
+
+
+def tail_cover(outline: BeamOutline, runs: Iterable[BarRun]) -> float:
+    """Return the least concrete outside of the hooks of given bars [mm]; infinite without any."""
+    (low, high), kept = outline.ends, tuple(runs)
+    starts = (run.start - low for run in kept if run.hook_start)
+    return min([*starts, *(high - run.end for run in kept if run.hook_end)], default=math.inf)
 
 
 def section_bars_of(
@@ -273,9 +282,14 @@ def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
 def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) -> TopBars:
     beside = [r for r in at_section(runs, "top", x) if r.place == "overhang"]
     number, web = sum(r.number for r in beside), _web_at(runs, "top", x, name, faults)
-    thinnest = min(beside, key=lambda r: r.diameter).size if beside else ""
-    same = not web or not beside or {r.size for r in beside} == {web[0].size}
-    return TopBars(web, number, "" if same else thinnest)
+    sizes = sorted({r.size for r in beside}, reverse=True)
+    if len(sizes) > 1:
+        faults.add(
+            f"bar runs: {name}: {', '.join(sizes)} stand in the overhangs; write bars of one size "
+            f"there, such as {sizes[-1]}"
+        )
+    same = not web or not beside or sizes == [web[0].size]
+    return TopBars(web, number, "" if same else sizes[0])
 
 
 def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int, at: float) -> BarLayers:
@@ -302,6 +316,12 @@ def _web_at(
                 f"bar runs: {name}: {', '.join(sizes)} stand in layer {layer} of the {face} bars; "
                 f"write at most two sizes a layer, such as {sizes[0]} and {sizes[-1]}"
             )
-        if row:
+        if row and len(layers) < layer - 1:
+            faults.add(
+                f"bar runs: {name}: {' + '.join(f'{r.number}-{r.size}' for r in row)} stand in "
+                f"layer {layer} of the {face} bars without a first layer; write layer 1 for them, "
+                "or bars of layer 1 that pass there"
+            )
+        elif row:
             layers.append(layer_of(BarLayer(r.number, r.size) for r in row))
     return tuple(layers)

@@ -61,20 +61,28 @@ class Steel:
     def rests(self, face: Face) -> list[float]:
         """Return how far from the face the outer side of each layer lies [mm]."""
         places: list[float] = []
-        at = self.cover + self.stirrup
+        at, below = self.cover + self.stirrup, 0.0
         for layer in self.layers(face):
             thick = max(run.diameter for run in layer)
+            if below:  # as the depth has it, by the thicker of both layers
+                thicker = max(below, thick)
+                at += below + max(1.4 * thicker, 1.4 * self.aggregate, LEAST_LAYER)
             places.append(at)
-            at += thick + max(1.4 * thick, 1.4 * self.aggregate, LEAST_LAYER)
+            below = thick
         return places
 
     def effective_depth(self, tension: Face) -> float | None:
-        """Depth to the centroid of the web bars of a face; none without bars [mm]."""
-        parts = [
-            (run.area, self.depth - rest - run.diameter / 2)
-            for layer, rest in zip(self.layers(tension), self.rests(tension), strict=True)
-            for run in layer
-        ]
+        """Depth to the centroid of the bars of a face, those of the overhangs too [mm].
+
+        None without bars in the web.
+        """
+        layers = zip(self.layers(tension), self.rests(tension), strict=True)
+        placed = [(run, rest) for layer, rest in layers for run in layer]
+        if placed:
+            outer = self.cover + self.stirrup
+            beside = (r for r in self.runs if (r.face, r.place) == (tension, "overhang"))
+            placed += [(run, outer) for run in beside]
+        parts = [(run.area, self.depth - rest - run.diameter / 2) for run, rest in placed]
         area = sum(each for each, _ in parts)
         return sum(each * depth for each, depth in parts) / area if area else None
 

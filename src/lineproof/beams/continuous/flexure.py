@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 
 from lineproof.beams.bars import TopBars, of_one_size
-from lineproof.beams.bottom_bars import TWO_SIZES, bars_inside, for_distance
+from lineproof.beams.bottom_bars import bars_inside, for_distance, placed, record_fit_above
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
@@ -286,8 +286,7 @@ def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:
 def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> None:
     sheet, inputs = model.sheet, model.inputs
     origin = _origin(inputs, inputs.top_bars[face.support - 1])
-    beside = "" if top.web.thinner is None else f" {TWO_SIZES}"
-    sheet.note("bars-text", f"Top bars: {top}, {origin}.{beside}", title="Bars")
+    sheet.note("bars-text", f"Top bars: {top}, {origin}.{placed(top.layers)}", title="Bars")
     entries = {
         "d_bs": sheet.lookup("d_bs", bars.BARS, inputs.stirrup, "d_b"),
         "r_s": sheet.lookup("r_s", bars.STIRRUP_BENDS, inputs.stirrup),
@@ -301,6 +300,9 @@ def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> No
     steps.bind(**entries)
     steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
     steps.check(bars.FITS)
+    if top.upper is not None:
+        steps.line(bars.DEPTH_FIRST)
+        steps.bind(d_2=record_fit_above(sheet, top.layers, origin, entries["d_b"]))
     if top.of_one_size:  # else area and depth have a part of their own
         steps.lines(SPREAD_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
 

@@ -91,7 +91,7 @@ def lap_pairs(
 ) -> tuple[tuple[int, int], ...]:
     """Return which runs are lapped, by their places in the list: one that ends, one that starts.
 
-    Every end has one mate at most: of several, the one with the longest overlap.
+    Every end has one mate at most: of several a like one, then the one with the longest overlap.
     """
     order = sorted(range(len(runs)), key=lambda j: runs[j].start)
     starts = [runs[j].start for j in order]
@@ -105,7 +105,8 @@ def lap_pairs(
     ended: set[int] = set()
     started: set[int] = set()
     made = []
-    for _, i, j in sorted(found, key=lambda row: (-row[0], row[1], row[2])):
+    found.sort(key=lambda row: (not alike(runs[row[1]], runs[row[2]]), -row[0], row[1], row[2]))
+    for _, i, j in found:
         if i not in ended and j not in started:
             ended.add(i)
             started.add(j)

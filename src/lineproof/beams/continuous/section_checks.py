@@ -95,16 +95,22 @@ def put_bottom(at: Numbers, layers: BarLayers, stirrup: str) -> Checks:
     second = layers[1]
     at["A_s1"] = value(bars.AREA_OF_BARS, at)
     put(at, bars.DEPTH_FIRST)
+    made |= _put_above(at, first, second)
+    at["A_s2"] = second.area
+    put(at, bars.DEPTH_SECOND, bars.TOTAL_AREA, bars.DEPTH_TWO_LAYERS)
+    if not of_one_size(layers):
+        _put_all(at, [*_first_groups(at, first), *_second_groups(at, first, second)])
+    return made
+
+
+def _put_above(at: Numbers, first: BarLayer, second: BarLayer) -> Checks:
+    """Put the distances of a second layer into the numbers; return whether it fits."""
     at["d_b2"] = second.diameter
     upper = at | {"d_b": second.diameter, "n_b": float(spaced(second.count))}
     at["s_min2"] = value(bars.LEAST_CLEAR, upper)
     at["s_c2"] = value(bars.CLEAR, upper)
     at["s_l"] = value(bars.LAYER_DISTANCE, at | {"d_b": max(first.diameter, second.diameter)})
-    at["A_s2"] = second.area
-    put(at, bars.DEPTH_SECOND, bars.TOTAL_AREA, bars.DEPTH_TWO_LAYERS)
-    if not of_one_size(layers):
-        _put_all(at, [*_first_groups(at, first), *_second_groups(at, first, second)])
-    return made | {bars.FITS_SECOND.key: utilisation(bars.FITS_SECOND, at)}
+    return {bars.FITS_SECOND.key: utilisation(bars.FITS_SECOND, at)}
 
 
 def put_top(at: Numbers, shape: Shape, top: TopBars, stirrup: str) -> Checks:
@@ -115,10 +121,16 @@ def put_top(at: Numbers, shape: Shape, top: TopBars, stirrup: str) -> Checks:
     at["s_c"] = value(bars.CLEAR, at | {"n_b": float(spaced(web.count))})
     put(at, bars.LEAST_CLEAR)
     made = {bars.FITS.key: utilisation(bars.FITS, at)}
+    if top.upper is not None:
+        put(at, bars.DEPTH_FIRST)
+        made |= _put_above(at, web, top.upper)
+        put(at, bars.DEPTH_SECOND)
     if top.of_one_size:
         put(at, SPREAD_AREAS[shape], bars.DEPTH_ONE_LAYER)
     else:
-        _put_all(at, [row for group in top.groups for row in _first_groups(at, group)])
+        first = [row for group in top.outer_groups for row in _first_groups(at, group)]
+        above = [] if top.upper is None else _second_groups(at, web, top.upper)
+        _put_all(at, [*first, *above])
     if shape != "rectangular":
         put(at, minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
         A_b = BARS.number(top.spread_size, "A_b")

@@ -110,7 +110,7 @@ def _record_torsion(design: Design, alike: Mapping[str, Entry]) -> dict[int, dic
             place = span_place(model.sheet, model.inputs, span)
             model.sheet.stand_for(place)
             steps = Steps(model.sheet, place | dict(alike))
-            corner = corner_bar(design.designed, span)
+            corner = corner_bar(model, design.designed, span, design.runs)
             made[span] = record_span_torsion(
                 steps, acting, design.outline.shape, corner,
                 cantilever=design.designed.cantilever(span),
@@ -181,7 +181,8 @@ def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:
         if known is not None and _is_depth(known.value, section):
             return known
     for where, groups, d in _several(design, section):
-        if len(groups) < 2 or not _is_depth(d, section):  # noqa: PLR2004 - more than one
+        one = len(groups) == 1 and groups[0].layer == 1
+        if one or not groups or not _is_depth(d, section):
             continue
         with sheet.part(f"{DEPTH}{section.key}", f"Span {span}: depth of the bars {where}"):
             steps = Steps(sheet, span_place(sheet, design.model.inputs, span))

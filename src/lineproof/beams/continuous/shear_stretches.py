@@ -181,7 +181,8 @@ def span_numbers(
     model: Model, designed: Designed, runs: Iterable[BarRun]
 ) -> tuple[SpanNumbers, ...]:
     """Return what the shear of every span rests on."""
-    standing = stand(designed, runs)
+    kept = tuple(runs)
+    standing = stand(designed, kept)
     return tuple(
         SpanNumbers(
             span,
@@ -191,7 +192,7 @@ def span_numbers(
             _end(model, designed, span, "left"),
             _end(model, designed, span, "right"),
             needed_bottom(model, designed, span),
-            span_torsion(model, designed, span),
+            span_torsion(model, designed, span, kept),
         )
         for span in range(1, model.spans + 1)
     )
