@@ -147,29 +147,29 @@ def test_bars_not_in_line_are_told() -> None:
         (
             [row("bottom", "4-25M", *ALONG, layer=2), *TOP, SPREAD],
             (
-                "bar runs: span 1: 4-25M stand in layer 2 of the bottom bars without a first layer; "
-                "write layer 1 for them, or bars of layer 1 that pass there"
+                "bar runs: span 1: 4-25M stand in layer 2 of the bottom bars without a first "
+                "layer; write layer 1 for them, or bars of layer 1 that pass there"
             ),
         ),
         (
             [B_25, row("top", "3-20M", *ALONG, layer=2)],
             (
-                "bar runs: support 1: 3-20M stand in layer 2 of the top bars without a first layer; "
-                "write layer 1 for them, or bars of layer 1 that pass there"
+                "bar runs: support 1: 3-20M stand in layer 2 of the top bars without a first "
+                "layer; write layer 1 for them, or bars of layer 1 that pass there"
             ),
         ),
         (
             [B_25, T_25, SPREAD, row("top", "2-25M", 5.2, 9.2, place="overhang")],
             (
-                "bar runs: support 2: 25M, 15M stand in the overhangs; write bars of one size there, "
-                "such as 15M"
+                "bar runs: support 2: 25M, 15M stand in the overhangs; write bars of one size "
+                "there, such as 15M"
             ),
         ),
         (
             [B_25, T_25, SPREAD, row("top", "6-25M", 5.2, 9.2, layer=2)],
             (
-                "top bars, layer 2, 7200 mm from the axis of support 1: 6 bars up to 25M stand side "
-                "by side, 19 mm apart, at least 35 mm; write fewer bars there"
+                "top bars, layer 2, 7200 mm from the axis of support 1: 6 bars up to 25M stand "
+                "side by side, 19 mm apart, at least 35 mm; write fewer bars there"
             ),
         ),
     ],
