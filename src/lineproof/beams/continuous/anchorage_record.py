@@ -242,7 +242,8 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         thin, thick = sorted((first, second), key=lambda run: run.diameter)
         length = first.end - second.start
         beside = standing_at_lap(kept, first, second)
-        widest = bar_of(designed, max(_at_lap(kept, first, second), key=lambda run: run.diameter))
+        row = [thick, *_at_lap(kept, first, second)]
+        widest = bar_of(designed, max(row, key=lambda run: run.diameter))
         same = (bar_of(designed, thin), bar_of(designed, thick), length, beside, widest)
         if same not in seen:
             seen.add(same)

@@ -151,7 +151,7 @@ def _stretches(
     for over in bars_over(designed, standing, face, span):
         near_left = over.start + over.end <= left + right
         d = section_depth(designed, face, span, span if near_left else span + 1)
-        if any(share.run.layer > 1 for share in over.shares):  # there the section may have one
+        if over.shares:  # others may stand there than at the section: a second layer, thicker ones
             d = min(d, depth_over(designed, span, over))
         yield Stretch(over.start - left, over.end - left, over.area, d)
 
