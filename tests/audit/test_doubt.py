@@ -124,7 +124,6 @@ def forces_said(**claims: str) -> tuple[Verdict, str]:
 @pytest.mark.parametrize(
     "others",
     [
-        {"R_D": "260"},
         {"R_D": "260", "R_L": "310"},
         {"R_D": "260", "R_L": "310", "R_S": "388"},  # one is finer, two are as coarse
     ],
@@ -145,6 +144,7 @@ def test_a_rounding_among_others_like_it_is_the_habit_of_its_author(
     "others",
     [
         {},
+        {"R_D": "260"},  # one alone may be a chance
         {"R_S": "388"},
         {"R_D": "260", "R_L": "312", "R_S": "388"},  # two are finer, one is as coarse
         {"R_D": "263"},
@@ -172,12 +172,19 @@ def test_two_digits_move_a_number_by_up_to_a_twentieth_where_all_have_two() -> N
 
 
 def test_cutting_digits_off_is_a_habit_until_a_number_is_rounded_up() -> None:
-    """120.9 cut to 120: 262.9 cut to 262 goes with it, 353.8 rounded to 354 does not."""
-    record = sheet_of(FORCES, POINTS | {"k_1": "1.0", "P_D": "262.9 kN", "P_S": "353.8 kN"})
-    made = record.close()
-    cut = {"beam/V_f": "120", "beam/R_D": "262"}
-    assert said_of(made, cut, "beam/V_f")[0] is Verdict.SAFE_ROUNDING
-    assert said_of(made, cut | {"beam/R_S": "354"}, "beam/V_f")[0] is Verdict.DOUBTFUL
+    """120.9 cut to 120: 262.9 cut to 262 and 284.7 to 284 go with it, 354 for 353.8 does not.
+
+    Nor does 360 for 357.8, though it follows within no digits. One up beside two cut is a chance,
+    two are as many.
+    """
+    points = {"k_1": "1.0", "P_D": "262.9 kN", "P_L": "284.7 kN", "P_S": "353.8 kN"}
+    lines = FORCES | {"R_Q = k_1*P_Q": "kN"}
+    record = sheet_of(lines, POINTS | points | {"P_Q": "357.8 kN"}).close()
+    cut = {"beam/V_f": "120", "beam/R_D": "262", "beam/R_L": "284"}
+    up = {"beam/R_S": "354", "beam/R_Q": "360"}
+    assert said_of(record, cut, "beam/V_f")[0] is Verdict.SAFE_ROUNDING
+    assert said_of(record, cut | {"beam/R_S": "354"}, "beam/V_f")[0] is Verdict.SAFE_ROUNDING
+    assert said_of(record, cut | up, "beam/V_f")[0] is Verdict.DOUBTFUL
 
 
 def test_forces_are_rounded_to_fives_only_by_habit() -> None:

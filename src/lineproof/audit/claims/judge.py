@@ -10,7 +10,7 @@ from itertools import chain
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
-from lineproof.audit.claims.habit import is_habit, numbers_of
+from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Form, Worker, claimed_form
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
@@ -99,6 +99,7 @@ class _Judge:
         self.taints: dict[str, frozenset[str]] = {}
         self.turned: dict[str, list[str]] = {}
         self.as_written: dict[str, bool] = {}
+        self.doubted: dict[str, bool] = {}
 
     def all(self) -> Iterator[Judged]:
         for node in self.graph:
@@ -270,20 +271,25 @@ class _Judge:
         return replace(made, verdict=Verdict.ORIGIN, slips=self._slips(node, claim))
 
     def _as_rounded(
-        self, node: Node, claim: Claim, around: Sequence[Interval], made: Judged
+        self, node: Node, claim: Claim, around: Sequence[Interval], judged: Judged
     ) -> Judged | None:
         """Judge a claim that is a coarse rounding: as its author rounds, or for once."""
         read = list(coarse_roundings(claim, node.symbol, around))
-        for rounded in (each for each in read if each.usual):
-            if is_habit(self.numbers, claim, node.symbol, rounded.step):
+        others = [
+            others_made(self.numbers, claim, node, each, self._in_doubt) if each.usual else 0
+            for each in read
+        ]
+        for rounded, made in zip(read, others, strict=True):
+            if made >= HABIT:
                 safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
-                said = self._rounded(node, claim, made, rounded, safe=safe)
+                said = self._rounded(node, claim, judged, rounded, safe=safe)
                 return replace(said, note=f"{said.note}; {_HABIT}", slips=())
-        for rounded in (each for each in read if each.alone):
-            safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
-            if rounded.usual or safe:
-                said = self._rounded(node, claim, made, rounded, safe=safe)
-                return self._beside_a_slip(node, claim, said)
+        for rounded, made in zip(read, others, strict=True):
+            if made or rounded.alone:
+                safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
+                if rounded.usual or safe:
+                    said = self._rounded(node, claim, judged, rounded, safe=safe)
+                    return self._beside_a_slip(node, claim, said)
         return None
 
     def _beside_a_slip(
@@ -297,6 +303,14 @@ class _Judge:
         slip, cause = found
         note = f"{read.note}; the same value is reproduced exactly with {cause.words}"
         return replace(read, verdict=Verdict.DOUBTFUL, note=note, slips=first_of(slips, slip))
+
+    def _in_doubt(self, entry_id: str) -> bool:
+        """Tell whether a likely slip gives a claim as well as its rounding does."""
+        if entry_id not in self.doubted:
+            claim = self.claims[entry_id]
+            slips = self._slips(self.graph[entry_id], claim)
+            self.doubted[entry_id] = plausible(self.graph, slips, claim) is not None
+        return self.doubted[entry_id]
 
     def _other_way(self, node: Node, claim: Claim) -> Other | None:
         """Return the other valid way that gives a claim, if one does."""

@@ -117,11 +117,19 @@ def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:
     digits = claim.typed.lower().partition("e")[0]
     if "." in digits and digits.endswith("0"):
         return ()
-    kind = UNITS[claim.unit].kind
-    is_size = kind == "length" and 2 * claim.stands_for.half >= _SIZE * (1 - 1e-9)
-    if is_size and stem(symbol) in _LAID_OUT:
+    if is_set_out(claim, symbol):
         return _SET_OUT
-    return _BUILT if is_size or kind == "area" else _DIGIT_LESS
+    return _BUILT if _is_size(claim) or UNITS[claim.unit].kind == "area" else _DIGIT_LESS
+
+
+def is_set_out(claim: Claim, symbol: str) -> bool:
+    """Tell whether a claim is a length that is set out on a drawing, in whole millimetres."""
+    return _is_size(claim) and stem(symbol) in _LAID_OUT
+
+
+def _is_size(claim: Claim) -> bool:
+    is_length = UNITS[claim.unit].kind == "length"
+    return is_length and 2 * claim.stands_for.half >= _SIZE * (1 - 1e-9)
 
 
 def _plain(step: Decimal) -> str:
