@@ -143,6 +143,15 @@ def test_what_hardly_moves_a_number_is_no_sign_of_a_step() -> None:
     assert not is_habit(said(record, R_Q="160", R_D="260", R_L="310"))
 
 
+def test_a_number_tells_though_it_follows_from_a_coarse_one() -> None:
+    """262.9 as 260, and 3.005 x 260 = 781.3 as 780: it follows from 259.6, and yet is a ten."""
+    lines = SHEAR | {"R_D = k_1*P_D": "kN", "W_f = k_3*R_D": "kN"}
+    record = sheet_of(lines, SPAN | {"P_D": "239 kN", "k_3": "3.005"}).close()
+    assert said(record, V_f="120", R_D="260").verdict is Verdict.DOUBTFUL
+    assert is_habit(said(record, V_f="120", R_D="260", W_f="780"))
+    assert not is_habit(said(record, V_f="120", R_D="260", W_f="781"))
+
+
 def test_order_of_the_table_does_not_matter() -> None:
     record = forces(D="239", L="284", S="353")
     claims = {"beam/V_f": "120", "beam/R_D": "260", "beam/R_L": "310", "beam/R_S": "388"}

@@ -42,8 +42,8 @@ class Step:
 class Number:
     """A number of a sheet: its quantity, unit and part, as typed, and how it may be rounded.
 
-    It has no ``steps`` if it follows within its digits, or if it is no rounding. ``up`` tells that
-    it was rounded up, ``built`` that it is a length which is round because it is built so.
+    It has no ``steps`` if its digits are those of what follows, or if it is no rounding. ``up``
+    tells that it was rounded up, ``built`` that it is a length, round because it is built so.
     """
 
     id: str
@@ -96,7 +96,7 @@ def numbers_of(graph: Graph, claims: Iterable[Claim], worlds: Worlds) -> tuple[N
 
 def _number(node: Node, claim: Claim, worlds: Worlds) -> Number:
     around = [w.follows[claim.id].interval for w in (worlds.claimed, worlds.sound)]
-    follows = any(claim.stands_for.meets(interval) for interval in around)
+    follows = any(claim.stands_for.holds(interval.middle) for interval in around)
     read = [] if follows else [r for r in coarse_roundings(claim, node.symbol, around) if r.usual]
     size = round(claim.value)
     return Number(
