@@ -17,6 +17,8 @@ from lineproof.beams.continuous.forces import Forces
 
 HEADER = "span,station (m),case,combination,M (kN.m),V (kN),T (kN.m)"
 REACTIONS = "support,case,combination,R (kN)"
+NEAR = 0.01
+"""Distance below which two stations are one in a file that is written to the thousandth [mm]."""
 Torsion = Callable[[int, float], float]
 
 
@@ -34,7 +36,8 @@ def stations_of(forces: Forces, span: int, pieces: int) -> list[float]:
     """Return even stations of a span on whole mm, and those where its load changes."""
     curves = forces.solved.solution.span(span)
     even = np.round(np.linspace(0.0, curves.length, pieces + 1))
-    return sorted({*even.tolist(), *curves.breaks.tolist()})
+    apart = np.abs(even[:, None] - curves.breaks).min(axis=1) > NEAR
+    return sorted({*even[apart].tolist(), *curves.breaks.tolist()})
 
 
 def rows_of(
