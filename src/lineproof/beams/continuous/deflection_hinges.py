@@ -24,7 +24,7 @@ from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import LOADS, Model
-from lineproof.beams.continuous.resistance import provide, stand
+from lineproof.beams.continuous.resistance import provide
 from lineproof.beams.continuous.resistance_cover import FACES
 from lineproof.beams.continuous.service import record_at
 from lineproof.beams.steps import Steps
@@ -77,9 +77,11 @@ def hinge_of(design: Design, span: int, services: Mapping[int, ServiceMoments]) 
     """
     model = design.model
     x, at = _places(design, span)
+    bare = {face: _bare(design, span, face, at) for face in FACES}
+    if not any(row.any() for row in bare.values()):
+        return None
     solution = model.forces.solution
     moments = solution.span(span).moment(x)
-    bare = {face: _bare(design, span, face, at) for face in FACES}
     limits = cracking_moments(model, span)
     for words, factors in _stages(model, span, services):
         M = np.array([factors.get(row, 0.0) for row in solution.rows]) @ moments
@@ -133,7 +135,7 @@ def _places(design: Design, span: int) -> tuple[Floats, Floats]:
 
 def _bare(design: Design, span: int, face: Face, at: Floats) -> Any:
     """Tell where no bars of the web count."""
-    standing = stand(design.designed, design.runs)
+    standing = design.standing
     web = [bars for bars in standing if bars.run.place != "overhang"]
     return provide(design.designed, web, face, at, np.full(len(at), span)).A <= 0
 

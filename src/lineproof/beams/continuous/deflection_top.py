@@ -8,7 +8,6 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
-from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.deflection_service import Stage, StageMoments, deflection_key
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
@@ -22,7 +21,6 @@ from lineproof.beams.continuous.developed import (
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import Model
-from lineproof.beams.continuous.resistance import stand
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import deflection, deflection_stages
 
@@ -93,9 +91,7 @@ def record_bottom(design: Design, span: int) -> None:
     if design.model.inputs.bar_runs is None:
         return
     counted = _at_midspan(design, span, "bottom")
-    at_most = developed_at(
-        stand(design.designed, design.runs), "bottom", sag_at(design.designed, span)
-    )
+    at_most = design.bottom_counted(span)
     if counted and not same(counted, at_most):
         title = f"Bottom bars at midspan of span {span}"
         _record(design, span, counted, bottom_key(span), title, _NOTE_BOTTOM)
@@ -104,7 +100,7 @@ def record_bottom(design: Design, span: int) -> None:
 def _at_midspan(design: Design, span: int, face: Face) -> tuple[Developed, ...]:
     axes = design.outline.axes
     middle = (axes[span - 1] + axes[span]) / 2
-    return developed_at(stand(design.designed, design.runs), face, middle)
+    return developed_at(design.standing, face, middle)
 
 
 def _record(

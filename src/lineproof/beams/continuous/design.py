@@ -108,11 +108,11 @@ class Design:
 
     def bottom_counted(self, span: int) -> tuple[Developed, ...]:
         """Return the bottom bars that count where the moment of a span is largest."""
-        return developed_at(self._standing, "bottom", sag_at(self.designed, span))
+        return developed_at(self.standing, "bottom", sag_at(self.designed, span))
 
     def top_counted(self, face: Face) -> tuple[Developed, ...]:
         """Return the top bars that count at the face of a support."""
-        return developed_at(self._standing, "top", self._place(face))
+        return developed_at(self.standing, "top", self._place(face))
 
     @cached_property
     def coverage(self) -> Coverage:
@@ -120,7 +120,8 @@ class Design:
         return covered(self.designed, self.runs)
 
     @cached_property
-    def _standing(self) -> tuple[Standing, ...]:
+    def standing(self) -> tuple[Standing, ...]:
+        """The bars along the beam with the lengths over which their stress rises."""
         return stand(self.designed, self.runs)
 
     def _place(self, face: Face) -> float:

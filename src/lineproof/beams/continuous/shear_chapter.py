@@ -29,7 +29,7 @@ from lineproof.beams.continuous.interface import (
 )
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
-from lineproof.beams.continuous.resistance import effective_depth, stand, top_layers
+from lineproof.beams.continuous.resistance import effective_depth, top_layers
 from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_sections import ShearSection
@@ -206,7 +206,7 @@ def _several(
     above = [(f"above support {j}", top_layers(designed, j)) for j in (span, span + 1)]
     for where, layers in (below, *above):
         yield where, groups_of_layers(layers), effective_depth(designed, layers, h)
-    for over in bars_over(designed, stand(designed, design.runs), face, span):
+    for over in bars_over(designed, design.standing, face, span):
         if over.shares:
             runs = (share.run for share in over.shares)
             yield "that stand there", groups_met(designed, runs), depth_over(designed, span, over)
@@ -245,7 +245,7 @@ def _record_bars(design: Design, steps: Steps, section: ShearSection) -> None:
 def _counted(design: Design, section: ShearSection, face: Face, area: float) -> tuple[Share, ...]:
     """Return the bars of a face whose area the section was chosen by."""
     x = design.outline.axes[section.span - 1] + section.demand.x
-    standing = stand(design.designed, design.runs)
+    standing = design.standing
     for over in bars_over(design.designed, standing, face, section.span):
         met = over.start - 1 <= x <= over.end + 1
         if met and abs(over.area - area) <= _SAME * max(area, 1.0):

@@ -24,7 +24,7 @@ from lineproof.beams.continuous.figure_envelope import (
 from lineproof.beams.continuous.figure_loads import loads_figure
 from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
 from lineproof.beams.continuous.model import LOADS, Model
-from lineproof.beams.continuous.resistance import provide, stand
+from lineproof.beams.continuous.resistance import provide
 from lineproof.beams.continuous.resistance_demand import stretches_at
 from lineproof.beams.continuous.summary_tables import (
     FLEXURE,
@@ -156,7 +156,7 @@ def _record_envelopes(design: Design) -> None:
     """Record moment and shear envelopes with the resistance laid over, and deflected shapes."""
     model, sheet = design.model, design.model.sheet
     rests = [*model.lengths, *(p.entries["M_f"] for p in sheet.parts if "M_f" in p.entries)]
-    standing = stand(design.designed, design.runs)
+    standing = design.standing
     moments, shears = [], []
     for span in range(1, model.spans + 1):
         left = design.outline.axes[span - 1]
