@@ -21,6 +21,8 @@ _STOPS = {
         shear.STRAIN_IN_RANGE, shear.BARS_IN_RANGE, *deflection_stages.NO_STIFFNESS,
     )
 }  # fmt: skip
+_NO_MOMENT = "no-moment"
+"""Note of parts of a face that no load case brings tension to."""
 _NO_BARS = ("no-bars", "none-going-on")
 """Notes of parts in which no bars stand, or none go on."""
 
@@ -117,10 +119,18 @@ class Calc:
         """Return the faces over supports that have a moment with the top in tension."""
         return [face for face in self.member.faces() if self._has_moment(*face)]
 
+    def moment_spans(self) -> list[int]:
+        """Return the spans that have a moment with the bottom in tension."""
+        return [k for k in self.member.sagging() if not self._lies_hogging(k)]
+
+    def _lies_hogging(self, span: int) -> bool:
+        parts = self.under(f"sag-{span}")
+        return bool(parts) and self.has(parts[0], _NO_MOMENT)
+
     def _has_moment(self, support: int, side: str) -> bool:
         parts = self.under(f"hog-{support}-{side}")
         if parts:
-            return not self.has(parts[0], "no-moment")
+            return not self.has(parts[0], _NO_MOMENT)
         carrier = self.member.support(support)
         rests = self.member.is_exterior(support) and carrier.turns and carrier.carrier == "wall"
         return not rests
@@ -131,7 +141,7 @@ def _beam(calc: Calc) -> Iterator[Spot]:
 
 
 def _spans(calc: Calc) -> Iterator[Spot]:
-    return (_span(calc, k) for k in calc.member.sagging())
+    return (_span(calc, k) for k in calc.moment_spans())
 
 
 def _span(calc: Calc, number: int) -> Spot:
@@ -139,14 +149,14 @@ def _span(calc: Calc, number: int) -> Spot:
 
 
 def _deep_spans(calc: Calc) -> Iterator[Spot]:
-    for spot in _spans(calc):
+    for spot in (_span(calc, k) for k in calc.member.sagging()):
         if any(calc.holds(part, "skin-required") for part in spot.parts):
             yield spot
 
 
 def _flanges(calc: Calc) -> Iterator[Spot]:
     if calc.value("h_f"):
-        for k in calc.member.sagging():
+        for k in calc.moment_spans():
             if not _span(calc, k).stopped:
                 yield Spot(f"span {k}", calc.under(f"interface-{k}"))
 
@@ -229,7 +239,10 @@ def _bottom_ends(calc: Calc) -> Iterator[Spot]:
 
 def _zeros(calc: Calc) -> Iterator[Spot]:
     """Give the ends near which the moment is zero: where the end is held it need not be."""
+    sagging = calc.moment_spans()
     for support, side in _bottom_sides(calc):
+        if (support if side == "left" else support - 1) not in sagging:
+            continue
         if calc.member.support(support).turns or not calc.member.is_exterior(support):
             yield _bottom_end(calc, support, side, "-zero")
 

@@ -89,7 +89,7 @@ def joined(designed: Designed, string: list[BarRun]) -> list[BarRun]:
     made: list[BarRun] = []
     for run in string:
         if made and made[-1].size == run.size:
-            serves = _serving(made[-1].serves, run.serves)
+            serves = serving(made[-1].serves, run.serves)
             made[-1] = replace(made[-1], end=run.end, hook_end=run.hook_end, serves=serves)
         elif made:
             made += _lapped(designed, made.pop(), run)
@@ -98,7 +98,8 @@ def joined(designed: Designed, string: list[BarRun]) -> list[BarRun]:
     return made
 
 
-def _serving(first: str, second: str) -> str:
+def serving(first: str, second: str) -> str:
+    """Return what two bars made one are for."""
     parts = [p for text in (first, second) for p in text.split(", ")]
     return ", ".join(dict.fromkeys(parts))
 

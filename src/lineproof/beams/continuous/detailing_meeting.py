@@ -1,17 +1,17 @@
-"""Top bars of two supports that meet in a span: like bars that overlap are lapped in full."""
+"""Top bars of two supports that meet in a span: like bars are one there."""
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-from dataclasses import dataclass
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.anchorage import development_length
 from lineproof.beams.continuous.cutoff import ceil50, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.detailing_holders import serving
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_length
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import alike
 
 
 @dataclass(frozen=True, slots=True)
@@ -25,10 +25,6 @@ class Reach:
     long: float
     short: float
     through: bool = False
-
-    def longer(self, by: float) -> Reach:
-        """Return a reach further by a length."""
-        return Reach(self.long + by, self.short + by, self.through)
 
 
 def with_restraint(
@@ -50,28 +46,40 @@ def with_restraint(
     )
 
 
-def met(
-    designed: Designed,
-    span: int,
-    reaches: tuple[Reach, Reach],
-    bars: tuple[Sequence[tuple[BarRun, bool]], Sequence[tuple[BarRun, bool]]],
-) -> tuple[Reach, Reach]:
-    """Return the reaches of both supports of a span so that no like bars overlap by half a lap.
+def run_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:
+    """Return the top bars besides the corner bars; like ones of two supports that meet are one.
 
-    ``bars`` are the groups of either support besides the corner bars, with whether they are long.
+    Common practice: in a short span, bars of both supports that would pass each other, or end
+    within a lap of each other, run through. ``rows`` holds the bars of every support, the corner
+    bars first; where one support has more of them, the rest keep their own ends.
     """
-    length = designed.outline.lengths[span - 1]
-    left, right = reaches
-    for first, first_long in bars[0]:
-        for second, second_long in bars[1]:
-            if not alike(first, second):
-                continue
-            reach = (
-                (left.long if first_long else left.short),
-                (right.long if second_long else right.short),
-            )
-            overlap, lap = sum(reach) - length, lap_length(designed, first)
-            if 0 < overlap < lap:
-                by = ceil50((lap - overlap) / 2)
-                left, right = left.longer(by), right.longer(by)
-    return left, right
+    made: list[BarRun] = []
+    before: list[BarRun] = []
+    for support in sorted(rows):
+        now: list[BarRun] = []
+        for run in rows[support][1:]:
+            rest = run
+            for place, earlier in enumerate(before):
+                if rest.number and earlier.number and _meet(designed, earlier, rest):
+                    number = min(earlier.number, rest.number)
+                    now.append(_one(earlier, rest, number))
+                    before[place] = replace(earlier, number=earlier.number - number)
+                    rest = replace(rest, number=rest.number - number)
+            now.append(rest)
+        made += before
+        before = now
+    return [run for run in (*made, *before) if run.number]
+
+
+def _meet(designed: Designed, first: BarRun, second: BarRun) -> bool:
+    same = (first.size, first.layer, first.place) == (second.size, second.layer, second.place)
+    return same and second.start - first.end < lap_length(designed, first)
+
+
+def _one(first: BarRun, second: BarRun, number: int) -> BarRun:
+    """Return bars that go from the outer end of the first to that of the second."""
+    left, right = min(first, second, key=lambda r: r.start), max(first, second, key=lambda r: r.end)
+    return replace(
+        first, number=number, start=left.start, hook_start=left.hook_start, end=right.end,
+        hook_end=right.hook_end, serves=serving(first.serves, second.serves),
+    )  # fmt: skip

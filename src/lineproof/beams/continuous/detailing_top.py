@@ -2,8 +2,8 @@
 
 Common practice: the corner bars, and more where a third of the steel asks for it, pass the point
 of inflection; the others are cut where these do alone; both alike on either side where the spans
-are alike. Between them two bars hold the stirrups, lapped with the corner bars; of the same size
-they are one with them.
+are alike; bars of two supports that meet in a short span are one. Between them two bars hold the
+stirrups, lapped with the corner bars; of the same size they are one with them.
 """
 
 from __future__ import annotations
@@ -35,7 +35,7 @@ from lineproof.beams.continuous.cutoff import (
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES, placed
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
-from lineproof.beams.continuous.detailing_meeting import Reach, met, with_restraint
+from lineproof.beams.continuous.detailing_meeting import Reach, run_through, with_restraint
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
@@ -85,10 +85,9 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
     spans = range(1, len(designed.outline.lengths) + 1)
     for span in spans:
         _fill(frame, span, reaches)
-        _meet(designed, span, reaches)
     rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
     corners = {support: row[0] for support, row in rows.items() if row}
-    others = [run for row in rows.values() for run in row[1:]]
+    others = run_through(designed, rows)
     string = joined(designed, with_holders(designed, corners))
     middles = [_middle(designed, span) for span in spans]
     return tuple(p for run in (*string, *others) for p in split(designed, run, middles))
@@ -102,24 +101,14 @@ def _fill(frame: Frame, span: int, reaches: dict[int, dict[End, Reach]]) -> None
     bounds = designed.outline.faces(span)
     length = ceil50(designed.outline.lengths[span - 1])
     while meeting:
-        runs = [r for s, _ in ends for r in _placed_all(designed, s, reaches[s])]
+        rows = {s: _placed_all(designed, s, reaches[s]) for s, _ in ends}
+        runs = [*(row[0] for row in rows.values() if row), *run_through(designed, rows)]
         if worst_between(frame, stand(designed, runs), "top", span, bounds) <= MARGIN:
             return
         if all(reaches[s][e].short >= length for s, e in meeting):
             return
         for s, e in meeting:
             reaches[s][e] = _longer(reaches[s][e], length)
-
-
-def _meet(designed: Designed, span: int, reaches: dict[int, dict[End, Reach]]) -> None:
-    """Lengthen like bars of both supports that overlap by less than a lap."""
-    left, right = reaches[span].get("right"), reaches[span + 1].get("left")
-    if left is None or right is None:
-        return
-    groups = groups_of(designed, span), groups_of(designed, span + 1)
-    bars = [[(run, i < long_of(row)) for i, run in enumerate(row)][1:] for row in groups]
-    found = met(designed, span, (left, right), (bars[0], bars[1]))
-    reaches[span]["right"], reaches[span + 1]["left"] = found
 
 
 def _longer(found: Reach, length: float) -> Reach:

@@ -1,4 +1,4 @@
-"""The faces of supports, and the spans with a moment that puts the bottom in tension."""
+"""The faces of supports, and the spans with bottom bars, in tension or not."""
 
 from __future__ import annotations
 
@@ -48,8 +48,16 @@ def faces_of(model: Model) -> list[Face]:
 
 
 def sagging_spans(model: Model) -> list[int]:
-    """Return the spans that have a moment with the bottom in tension: all but cantilevers."""
+    """Return the spans whose bottom bars have a section of their own: all but cantilevers."""
     return [k for k in range(1, model.spans + 1) if not model.forces.beam.cantilever(k)]
+
+
+def has_sag(model: Model, span: int) -> bool:
+    """Tell whether any load case brings tension to the bottom of a span.
+
+    None does in a short span between long ones.
+    """
+    return model.forces.sag(span).M > 0
 
 
 def nominally_simple(model: Model, face: Face) -> bool:

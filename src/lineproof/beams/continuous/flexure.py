@@ -18,12 +18,14 @@ from lineproof.beams.continuous.developed import (
 from lineproof.beams.continuous.faces import (
     Face,
     faces_of,
+    has_sag,
     hogging,
     nominally_simple,
 )
 from lineproof.beams.continuous.flexure_gaps import (
     record_depth_assumed,
     record_depth_beside,
+    record_none,
     record_without,
 )
 from lineproof.beams.continuous.forces import Demand, End
@@ -44,11 +46,18 @@ from lineproof.beams.section import zone_of
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import analysis, bars, flexure, minimum
+from lineproof.standards.references import MECHANICS
 
 _LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
 _SHARED = ("M_r", "A_s", "d", "n_o", "A_b", "d_b", "d_bs")
 """What both faces of a support share where their section is the same."""
 _SAME = 1e-9
+NO_MOMENT = "no-moment"
+"""Key of the note that no load case brings tension to a face of the beam."""
+NO_SAG = (
+    "No load case brings tension to the bottom anywhere in this span: the moment above is the "
+    "smallest that the top has. The bottom bars hold the stirrups."
+)
 CHOSEN = "chosen: one size for the beam, few second layers, then least mass"
 
 
@@ -63,7 +72,8 @@ def record_sag(design: Design, span: int) -> None:
     """Record a span's largest moment, its bottom bars, their resistance and all checks.
 
     Given bars are counted as far as they are developed where that moment stands; where none stand
-    there is no resistance.
+    there is no resistance. Where no load case brings tension to the bottom, that is said, and the
+    bars have a resistance but nothing to resist.
     """
     model, layers = design.model, design.bottom_bars(span)
     sheet, inputs = model.sheet, model.inputs
@@ -81,26 +91,46 @@ def record_sag(design: Design, span: int) -> None:
         steps = begin(model, span, "b_f" if inputs.slab else "b_w")
         near = nearer(model, demand)
         record_forces(steps, model, demand, near, x=at_face(model, demand, near))
-        if not layers:
-            steps.bind(**counts)
-            record_without(steps, inputs.shape, "bottom")
-            return
-        origin = _origin(inputs, inputs.bottom_bars[span - 1])
-        bars_inside(sheet, layers, stirrup=inputs.stirrup, origin=origin)
-        _take(steps, _LAYERS)
+        sags = has_sag(model, span)
+        if not sags:
+            sheet.note(NO_MOMENT, NO_SAG, title="Bottom bars", basis=MECHANICS)
         steps.bind(**counts)
+        if layers:
+            _record_span_bars(steps, design, span, counted=bool(counts), sags=sags)
+        elif sags:
+            record_without(steps, inputs.shape, "bottom")
+        else:
+            record_none(steps, "bottom")
+
+
+def _record_span_bars(
+    steps: Steps, design: Design, span: int, *, counted: bool, sags: bool
+) -> None:
+    """Record inside the open part bars, resistance and, where the span ``sags``, all checks.
+
+    ``counted`` says that the bars count otherwise than in full: their d and A_s are bound.
+    """
+    inputs, layers, own = design.model.inputs, design.bottom_bars(span), dict(steps.place)
+    origin = _origin(inputs, inputs.bottom_bars[span - 1])
+    bars_inside(steps.sheet, layers, stirrup=inputs.stirrup, origin=origin)
+    _take(steps, _LAYERS)
+    if counted:
+        steps.bind(d=own["d"], A_s=own["A_s"])
+    if sags:
         required(steps, inputs.shape)
         steps.check(flexure.ENOUGH_STEEL)
-        M_r = resistance(steps, inputs.shape)
-        record_yield(steps, design.pair)
+    M_r = resistance(steps, inputs.shape)
+    record_yield(steps, design.pair)
+    if sags:
         steps.check(flexure.STRENGTH)
-        case = "two layers" if len(layers) > 1 and not counts else "one layer"
-        record_proof(steps, (zone_of(inputs.shape), case), M_r)
+    case = "two layers" if len(layers) > 1 and not counted else "one layer"
+    record_proof(steps, (zone_of(inputs.shape), case), M_r)
+    if sags:
         minimum_of(
             steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
         )
         cracks_inside(steps, inputs.exposure, layers)
-        skin_inside(steps, inputs.exposure)
+    skin_inside(steps, inputs.exposure)
 
 
 def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
@@ -219,7 +249,7 @@ def record_no_moment(model: Model, face: Face) -> None:
         if rests
         else "No load case brings tension to the top here; bars that hold the stirrups run through."
     )
-    model.sheet.note("no-moment", text, title="Top bars", basis="common practice")
+    model.sheet.note(NO_MOMENT, text, title="Top bars", basis="common practice")
 
 
 def record_demand(steps: Steps, model: Model, face: Face) -> None:

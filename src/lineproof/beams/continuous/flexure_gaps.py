@@ -46,6 +46,13 @@ def record_depth_assumed(steps: Steps, stirrup: str, holder: str) -> None:
     steps.line(bars.DEPTH_ONE_LAYER)
 
 
+def record_none(steps: Steps, face: Face) -> None:
+    """Record that no bars stand where none are needed: no load case brings tension to the face."""
+    sheet = steps.sheet
+    sheet.note("bars-text", f"{face.capitalize()} bars: none.", title="Bars")
+    steps.bind(A_s=sheet.given("A_s", "0 mm2", source="no bars stand here"))
+
+
 def record_without(steps: Steps, shape: Shape, face: Face) -> None:
     """Record the steel required against none, and the moment against no resistance."""
     sheet = steps.sheet

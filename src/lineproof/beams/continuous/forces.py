@@ -128,7 +128,10 @@ class Forces:
             values = np.maximum(values, curves.moment(np.array([face]))[:, 0])
         row = int(values.argmax())
         at = float(x[row])
-        if values[row] > found.largest[row] * (1 + 1e-12) or at != found.x_largest[row]:
+        # Where no sagging moment arises the largest one is below zero.
+        if values[row] > found.largest[row] + abs(found.largest[row]) * 1e-12 or (
+            at != found.x_largest[row]
+        ):
             ends = curves.moment(np.array([start, end]))[row]
             at = start if ends[0] >= ends[1] else end
         return self.demand(span, at, "right" if at < end else "left", row)

@@ -18,7 +18,7 @@ from lineproof.beams.continuous.cutoff_sets import groups_met, groups_of_layers
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import bars_of, record_groups
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
-from lineproof.beams.continuous.faces import faces_of, hogging, restrained_supports
+from lineproof.beams.continuous.faces import faces_of, has_sag, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.groups import Group, groups_of
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion
@@ -346,7 +346,7 @@ def _record_interfaces(design: Design) -> None:
     slab = model.inputs.slab_bars
     assert slab is not None  # asked for before  # noqa: S101
     sheet = model.sheet
-    for span in design.bottom:
+    for span in (k for k in design.bottom if has_sag(model, k)):
         entries = sheet.entries_of(f"sag-{span}") | bars_of(sheet, f"sag-{span}")
         with sheet.part(f"interface-{span}", f"Span {span}: flange and web in sagging moment"):
             steps = _flange_steps(sheet, model, span)

@@ -15,7 +15,7 @@ from itertools import pairwise
 import numpy as np
 
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
-from lineproof.beams.continuous.faces import faces_of, hogging
+from lineproof.beams.continuous.faces import faces_of, has_sag, hogging
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.beams.continuous.model import Model
@@ -215,8 +215,11 @@ def _end(model: Model, designed: Designed, span: int, end: End) -> SpanEnd:
 
 
 def needed_bottom(model: Model, designed: Designed, span: int) -> float | None:
-    """Return the area of bottom bars that the largest moment of a span alone asks for."""
-    if model.forces.beam.cantilever(span):
+    """Return the area of bottom bars that the largest moment of a span alone asks for.
+
+    None where no load case brings tension to the bottom.
+    """
+    if model.forces.beam.cantilever(span) or not has_sag(model, span):
         return None
     d = section_depth(designed, "bottom", span)
     return area_for(designed, model.forces.sag(span).M, d, designed.outline.widths[span - 1])

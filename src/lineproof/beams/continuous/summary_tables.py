@@ -12,6 +12,7 @@ from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.faces import (
     Face,
     faces_of,
+    has_sag,
     hogging,
     nominally_simple,
     sagging_spans,
@@ -81,8 +82,13 @@ def flexure_rows(model: Model) -> Iterator[Row]:
 
 def _sag(model: Model, span: int) -> Row:
     entries = model.sheet.entries_of(f"sag-{span}")
-    case = short_case(model.forces.sag(span).case)
     counted = entries | bars_of(model.sheet, f"sag-{span}")
+    if not has_sag(model, span):
+        A_s = printed(counted["A_s"].value, "mm2")
+        M_r = printed(entries["M_r"].value, "kN.m") if "M_r" in entries else ""
+        cells = (f"span {span}", "no tension at the bottom", "", "", _bars(entries), A_s, M_r, "")
+        return Row(cells, None)
+    case = short_case(model.forces.sag(span).case)
     return _moment_row(f"span {span}", case, entries, counted, _bars(entries))
 
 
