@@ -55,8 +55,8 @@ _SAME = 1e-9
 NO_MOMENT = "no-moment"
 """Key of the note that no load case brings tension to a face of the beam."""
 NO_SAG = (
-    "No load case brings tension to the bottom anywhere in this span: the moment above is the "
-    "smallest that the top has. The bottom bars hold the stirrups."
+    "No load case brings tension to the bottom anywhere in this span: even in the case nearest to "
+    "it, above, the top is in tension. The bottom bars hold the stirrups."
 )
 CHOSEN = "chosen: one size for the beam, few second layers, then least mass"
 
