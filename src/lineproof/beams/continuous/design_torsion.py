@@ -134,7 +134,7 @@ def _counts(T: np.ndarray, T_cr: float) -> np.ndarray:
 
 
 def lacks(checks: Sequence[SpanCheck]) -> Iterator[Lack]:
-    """Give the stations at which bars lack for torsion, or for shear at the face of a girder.
+    """Give the stations at which bars lack for torsion, or for shear at a critical section.
 
     The worst of each half of a span.
     """

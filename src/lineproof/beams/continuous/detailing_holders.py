@@ -44,7 +44,7 @@ def with_holders(designed: Designed, corners: dict[int, BarRun]) -> list[BarRun]
         if span in corners:
             made.append(corners[span])
         if not designed.cantilever(span):
-            held = _between(designed, span, corners.get(span), corners.get(span + 1))
+            held = _between(designed, span, corners)
             made += [held] if held is not None else []
         elif span not in corners and span + 1 not in corners:
             made.append(_bare(designed, span))
@@ -69,14 +69,22 @@ def _outer(designed: Designed, span: int, near: End) -> float:
     return axis_of(designed, span, near)
 
 
-def _between(
-    designed: Designed, span: int, left: BarRun | None, right: BarRun | None
-) -> BarRun | None:
-    """Return the bars that hold the stirrups of a span; None where the top bars meet."""
+def _between(designed: Designed, span: int, corners: dict[int, BarRun]) -> BarRun | None:
+    """Return the bars that hold the stirrups of a span; None where the top bars meet.
+
+    The bars of a support may reach past the next one, where that has none.
+    """
+    start, end = (_outer(designed, span, near) for near in SIDES)
+    left = max((run for k, run in corners.items() if k <= span), key=lambda r: r.end, default=None)
+    right = min(
+        (run for k, run in corners.items() if k > span), key=lambda r: r.start, default=None
+    )
+    left = left if left is not None and left.end > start else None
+    right = right if right is not None and right.start < end else None
     laps = _holder_lap(designed, span, left), _holder_lap(designed, span, right)
-    start = left.end if left else _outer(designed, span, "left")
-    end = right.start if right else _outer(designed, span, "right")
-    if left and right and end - start < 2 * max(laps):
+    start, end = left.end if left else start, right.start if right else end
+    least = 2 * max(laps) if left and right else 0.0
+    if end - start < least or end <= start:
         return None
     return BarRun(
         "top", 1, CORNERS, designed.bars.holders, start - laps[0], end + laps[1],

@@ -1,4 +1,4 @@
-"""Top bars of two supports that meet in a span: like bars are one there."""
+"""How far the top bars of a support reach; those of two supports that meet are one."""
 
 from __future__ import annotations
 
@@ -6,12 +6,15 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.anchorage import development_length
-from lineproof.beams.continuous.cutoff import ceil50, half_of, support_of
+from lineproof.beams.continuous.cutoff import ceil50, far_face, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import serving
-from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length
 from lineproof.beams.continuous.layout import BarRun
+
+BESIDE = 300.0
+"""Bars that would end so near the face of an end support, or beyond it, run in [mm]."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,6 +47,26 @@ def with_restraint(
     return Reach(
         max(found.long, min(least, most)), max(found.short, min(least, most)), found.through
     )
+
+
+def furthest(designed: Designed, span: int, near: End) -> float:
+    """Return how far bars can reach: past the far axis, at the end of the beam into the support."""
+    length = designed.outline.lengths[span - 1]
+    far = support_of(span, other(near))
+    if far not in (1, len(designed.outline.supports)):
+        return length * 2
+    return length + designed.outline.supports[far - 1].half - designed.end_cover
+
+
+def to_the_end(designed: Designed, span: int, near: End, t: float) -> float:
+    """Return a reach; where it ends in or beside an end support, as far as the bars can go.
+
+    There they are hooked like the top bars of that support (common practice).
+    """
+    beside = t > far_face(designed, span, near) - BESIDE
+    if beside and designed.exterior(support_of(span, other(near))):
+        return furthest(designed, span, near)
+    return t
 
 
 def run_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:

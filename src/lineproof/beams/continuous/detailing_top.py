@@ -35,7 +35,13 @@ from lineproof.beams.continuous.cutoff import (
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES, placed
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
-from lineproof.beams.continuous.detailing_meeting import Reach, run_through, with_restraint
+from lineproof.beams.continuous.detailing_meeting import (
+    Reach,
+    furthest,
+    run_through,
+    to_the_end,
+    with_restraint,
+)
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun, Hook
@@ -187,7 +193,11 @@ def _end(designed: Designed, support: int, side: End, run: BarRun, reach: float 
     axis = designed.outline.axes[support - 1]
     sign = -1.0 if side == "left" else 1.0
     if reach is not None:
-        return placed(side, run, axis + sign * reach)
+        span = support - 1 if side == "left" else support
+        far = support - 1 if side == "left" else support + 1
+        ends = designed.exterior(far) and reach >= furthest(designed, span, other(side))
+        hook = end_hook(designed, far, run) if ends else ""
+        return placed(side, run, axis + sign * reach, hook)
     half = designed.outline.supports[support - 1].half
     x = axis + sign * (half - designed.end_cover)
     return placed(side, run, x, end_hook(designed, support, run))
@@ -221,18 +231,14 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
         whole = short >= long
         long = _meeting(work)
         short = long if whole else short
-    long = min(long, _furthest(designed, span, near))
-    found = Reach(long, min(short, long), through)
-    return with_restraint(designed, span, near, groups, found)
-
-
-def _furthest(designed: Designed, span: int, near: End) -> float:
-    """Return how far bars can reach: past the far axis, at the end of the beam into the support."""
-    length = designed.outline.lengths[span - 1]
-    far = support_of(span, other(near))
-    if far not in (1, len(designed.outline.supports)):
-        return length * 2
-    return length + designed.outline.supports[far - 1].half - designed.end_cover
+    long = min(long, furthest(designed, span, near))
+    found = with_restraint(
+        designed, span, near, groups, Reach(long, min(short, long), through)
+    )  # fmt: skip
+    return replace(
+        found, long=to_the_end(designed, span, near, found.long),
+        short=to_the_end(designed, span, near, found.short),
+    )  # fmt: skip
 
 
 def _lengthened(work: Work, long: float, short: float, most: float) -> tuple[float, float, bool]:

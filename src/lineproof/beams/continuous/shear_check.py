@@ -187,15 +187,15 @@ class SpanCheck:
         """Return the area that bottom and top bars need, and that which counts [mm2].
 
         By case and column. Zero is needed nearer to a support than a critical section, and where
-        torsion does not count, but for the tension side at a face that a girder holds: there no
-        longer bars stand for the shear, and the largest moment is no cap (11.3.9.4).
+        torsion does not count, but for the tension side at the critical sections themselves: there
+        no longer bars stand for the shear (11.3.9.1).
         """
         v, force = self.state.v, self.state.basis.phi_s * self.state.basis.f_y
         there = np.where(v["bottom"], v["A_sp"], v["A_s"])
         here = np.where(v["bottom"], v["A_s"], v["A_sp"])
         asked = v["counts"].copy()
         for column, end in ((0, self.state.numbers.left), (-1, self.state.numbers.right)):
-            asked[:, column] |= end.held == "indirect"
+            asked[:, column] |= end.held != "free"
         bottom, top = (np.where(self.state.nearer, 0.0, F / force) for F in self._by_face(asked))
         return (bottom, here), (top, there)
 
@@ -205,7 +205,7 @@ class SpanCheck:
         That of the tension side where it is ``asked``, that of the other side for torsion.
         """
         v = self.state.v
-        tension = np.where(asked, self.bars["F_lt"], 0.0)
+        tension = np.where(asked, self._capped(self.bars["F_lt"]), 0.0)
         compression = np.where(v["counts"], self.bars["F_lc"], 0.0)
         bottom = np.where(v["bottom"], tension, compression)
         return bottom, np.where(v["bottom"], compression, tension)

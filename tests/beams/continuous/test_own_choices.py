@@ -1,0 +1,49 @@
+"""Beams of unusual make that are left open: no check of what the program chose itself fails.
+
+Each once had a choice that failed one of its own checks: bars cut too short for the tension with
+shear, stirrups changed right at a point load, bars that ended inside an end support, bars that hold
+the stirrups where those of both neighbours pass. Deflections are a matter of the depth that is
+given.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+import pytest
+
+from lineproof.audit.search.missing import missing_checks
+from lineproof.record import recompute
+
+from . import flow
+
+COLUMN, GIRDER, WALL = "column 450 mm", "girder 400 mm", "wall 300 mm"
+BEAMS: Mapping[str, Mapping[str, Any]] = {
+    "wide and shallow": {
+        "spans": ["7 m", "7 m"], "supports": [WALL, COLUMN, WALL], "b_w": "1200 mm", "h": "350 mm",
+    },
+    "point load where the stirrups change": {
+        "spans": ["5.3 m"] * 4, "supports": [*[COLUMN] * 4, GIRDER], "h": "350 mm",
+        "b_w": "400 mm", "f_c": "35 MPa", "spacing": "3.6 m", "superimposed": "2.2 kPa",
+        "loads": [{"type": "D", "span": 2, "point": "145 kN", "at": "1.5 m", "what": "beam"}],
+    },
+    "a short end span": {"spans": ["3 m", "8 m"], "supports": [GIRDER, COLUMN, GIRDER]},
+    "a support that is pulled up": {
+        "spans": ["8 m", "2 m", "2 m", "8 m"],
+        "supports": [GIRDER, COLUMN, COLUMN, COLUMN, GIRDER],
+    },
+    "short spans of two lengths": {
+        "spans": ["10 m", "5 m", "3 m", "9 m"], "supports": [COLUMN] * 5, "h": "700 mm",
+    },
+}  # fmt: skip
+
+
+@pytest.mark.parametrize("beam", BEAMS)
+def test_no_choice_fails_its_own_check(beam: str) -> None:
+    """All checks but those of deflection hold, none is missing, and the record recomputes."""
+    record = flow.record_of(**BEAMS[beam])
+
+    assert [i for i in record.failed if not i.startswith("deflection-")] == []
+    assert missing_checks(record) == ()
+    assert recompute(record) == []
