@@ -23,6 +23,8 @@ _STOPS = {
 }  # fmt: skip
 _NO_MOMENT = "no-moment"
 """Note of parts of a face that no load case brings tension to."""
+_NO_ZERO = "no-zero-moment"
+"""Note that no point of inflection stands near a support."""
 _NO_BARS = ("no-bars", "none-going-on")
 """Notes of parts in which no bars stand, or none go on."""
 
@@ -239,12 +241,12 @@ def _bottom_ends(calc: Calc) -> Iterator[Spot]:
 
 def _zeros(calc: Calc) -> Iterator[Spot]:
     """Give the ends near which the moment is zero: where the end is held it need not be."""
-    sagging = calc.moment_spans()
     for support, side in _bottom_sides(calc):
-        if (support if side == "left" else support - 1) not in sagging:
+        spot = _bottom_end(calc, support, side, "-zero")
+        if any(calc.has(part, _NO_ZERO) for part in spot.parts):
             continue
         if calc.member.support(support).turns or not calc.member.is_exterior(support):
-            yield _bottom_end(calc, support, side, "-zero")
+            yield spot
 
 
 def _exterior(calc: Calc) -> Iterator[Spot]:

@@ -37,10 +37,18 @@ from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import development, hooks, shear, shear_bars, torsion
+from lineproof.standards.references import MECHANICS
 
 Hooks = Mapping[tuple[int, str], Entry]
 """Recorded development lengths of hooks by support number and bar size."""
 
+NOT_ZERO = "no-zero-moment"
+"""Key of the note that no point of inflection stands near a support."""
+_NOT_ZERO = (
+    "In no load case does the moment turn from the top to the bottom between this support and the "
+    "other one: the limit at the point of inflection has nothing to check here. Whether the bars "
+    "are developed where they are in tension is checked along the beam."
+)
 _ASSUMED = (
     "The analysis takes this end as simple, the top bars are designed for an assumed restraint: "
     "its moment has no diagram along the span. All top bars, those in the overhangs too, reach a "
@@ -122,6 +130,11 @@ def record_zero_moment(site: Site, hooked: Hooks) -> None:
         return
     point = inflection(designed, side.span, side.near)
     if point is None:
+        title = f"{site.title}: no point of inflection near support {support}"
+        with site.writers.sheet.part(f"{site.key}-zero", title):
+            site.writers.sheet.note(
+                NOT_ZERO, _NOT_ZERO, title="Zero moment", clause="12.11.3", basis=MECHANICS
+            )
         return
     title = f"{site.title}: at the point of inflection near support {support}"
     with site.writers.sheet.part(f"{site.key}-zero", title):
