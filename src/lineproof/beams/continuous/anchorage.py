@@ -10,6 +10,7 @@ from typing import Any, Literal
 
 from lineproof.beams.bars import spaced
 from lineproof.beams.continuous import numbers
+from lineproof.beams.continuous.bending import hook_leg
 from lineproof.beams.continuous.detailing_data import Basis, Designed
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.formula import Criterion, Formula
@@ -21,6 +22,8 @@ Place = Literal["web", "overhang", "side face"]
 TOP_ROW, OTHER_ROW = "more than 300 mm of fresh concrete below", "other"
 COVERED_ROW, UNCOVERED_ROW = "side cover 60 mm and tail cover 50 mm or more", "less"
 TIED_ROW, UNTIED_ROW = "ties at 3 bar diameters or closer", "none"
+WIDEST_BENDS = "400R"
+"""A grade with the wider bends of the two."""
 TIE_STEP = 5.0
 """Step of the spacing of ties around hooks [mm]."""
 
@@ -277,3 +280,15 @@ def available(designed: Designed, support: int) -> float:
     return value(
         hooks.AVAILABLE, b_sp=designed.outline.supports[support - 1].width, c_end=designed.end_cover
     )
+
+
+def fits_hook(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> bool:
+    """Tell whether a hook of a size has room in the depth and is developed at the inner face."""
+    if not has_hooks(designed):
+        return True
+    outline = designed.outline
+    depth = outline.depths[0 if support == 1 else -1]
+    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
+    if hook_leg(size, WIDEST_BENDS) > depth - 2 * (outline.cover + d_bs):
+        return False
+    return hook_at(designed, support, size, spread=spread).l_dh <= available(designed, support)

@@ -15,13 +15,13 @@ from typing import Any
 
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars, bars_text
 from lineproof.beams.continuous import faces, flexure_choice
+from lineproof.beams.continuous.anchorage import fits_hook
 from lineproof.beams.continuous.bar_choice import Bars, Chosen
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design_torsion import (
     HOLDERS,
     Asked,
     Open,
-    fits_hook,
     more,
     torsion_forces,
 )

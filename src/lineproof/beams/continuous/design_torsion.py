@@ -14,8 +14,7 @@ from dataclasses import dataclass, field, replace
 import numpy as np
 
 from lineproof.beams.choice import SIZES
-from lineproof.beams.continuous.anchorage import available, has_hooks, hook_at
-from lineproof.beams.continuous.bending import hook_leg
+from lineproof.beams.continuous.anchorage import fits_hook
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import Standing
@@ -30,8 +29,6 @@ HOLDERS = "15M"
 """Size of the two bars that hold the stirrups where no other top bars do (common practice)."""
 RESERVE = 0.997
 """Part of the bars that torsion may use: the layout of bars keeps two thousandths itself."""
-WIDEST_BENDS = "400R"
-"""A grade with the wider bends of the two."""
 STEPS = 4
 """Steps in which bars are counted over their development length for shear (shear_stretches)."""
 
@@ -194,18 +191,6 @@ def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tupl
 
 def _hooked(run: BarRun, support: int) -> str:
     return run.hook_start if support == 1 else run.hook_end
-
-
-def fits_hook(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> bool:
-    """Tell whether a hook of a size has room in the depth and is developed at the inner face."""
-    if not has_hooks(designed):
-        return True
-    outline = designed.outline
-    depth = outline.depths[0 if support == 1 else -1]
-    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
-    if hook_leg(size, WIDEST_BENDS) > depth - 2 * (outline.cover + d_bs):
-        return False
-    return hook_at(designed, support, size, spread=spread).l_dh <= available(designed, support)
 
 
 def _with(made: Asked, before: Asked, lack: Lack, bars: SectionBars, free: Open) -> Asked:

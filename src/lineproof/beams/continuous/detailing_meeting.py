@@ -5,8 +5,13 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 
-from lineproof.beams.continuous.anchorage import development_length
-from lineproof.beams.continuous.cutoff import ceil50, far_face, half_of, support_of
+from lineproof.beams.continuous.anchorage import (
+    available,
+    development_length,
+    fits_hook,
+    has_hooks,
+)
+from lineproof.beams.continuous.cutoff import STEP, ceil50, far_face, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import serving
 from lineproof.beams.continuous.forces import End, other
@@ -58,15 +63,26 @@ def furthest(designed: Designed, span: int, near: End) -> float:
     return length + designed.outline.supports[far - 1].half - designed.end_cover
 
 
-def to_the_end(designed: Designed, span: int, near: End, t: float) -> float:
-    """Return a reach; where it ends in or beside an end support, as far as the bars can go.
+def to_the_end(designed: Designed, span: int, near: End, run: BarRun, t: float) -> float:
+    """Return where bars end that reach so far: in an end support as far as they can go.
 
-    There they are hooked like the top bars of that support (common practice).
+    There they are hooked like the top bars of that support (common practice); where they cannot
+    be anchored in it, they end before it.
     """
-    beside = t > far_face(designed, span, near) - BESIDE
-    if beside and designed.exterior(support_of(span, other(near))):
+    support, face = support_of(span, other(near)), far_face(designed, span, near)
+    if t <= face - BESIDE or not designed.exterior(support):
+        return t
+    if _anchors(designed, support, run):
         return furthest(designed, span, near)
-    return t
+    return min(t, face // STEP * STEP)
+
+
+def _anchors(designed: Designed, support: int, run: BarRun) -> bool:
+    """Tell whether top bars of another support are developed in an end support."""
+    if development_length(designed, run) <= available(designed, support):
+        return True
+    spread = run.place == "overhang"
+    return has_hooks(designed) and fits_hook(designed, support, run.size, spread=spread)
 
 
 def run_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:

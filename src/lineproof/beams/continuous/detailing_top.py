@@ -195,9 +195,9 @@ def _end(designed: Designed, support: int, side: End, run: BarRun, reach: float 
     if reach is not None:
         span = support - 1 if side == "left" else support
         far = support - 1 if side == "left" else support + 1
-        ends = designed.exterior(far) and reach >= furthest(designed, span, other(side))
-        hook = end_hook(designed, far, run) if ends else ""
-        return placed(side, run, axis + sign * reach, hook)
+        t = to_the_end(designed, span, other(side), run, reach)
+        ends = designed.exterior(far) and t >= furthest(designed, span, other(side))
+        return placed(side, run, axis + sign * t, end_hook(designed, far, run) if ends else "")
     half = designed.outline.supports[support - 1].half
     x = axis + sign * (half - designed.end_cover)
     return placed(side, run, x, end_hook(designed, support, run))
@@ -232,13 +232,8 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
         long = _meeting(work)
         short = long if whole else short
     long = min(long, furthest(designed, span, near))
-    found = with_restraint(
-        designed, span, near, groups, Reach(long, min(short, long), through)
-    )  # fmt: skip
-    return replace(
-        found, long=to_the_end(designed, span, near, found.long),
-        short=to_the_end(designed, span, near, found.short),
-    )  # fmt: skip
+    found = Reach(long, min(short, long), through)
+    return with_restraint(designed, span, near, groups, found)
 
 
 def _lengthened(work: Work, long: float, short: float, most: float) -> tuple[float, float, bool]:
