@@ -11,7 +11,7 @@ from lineproof.beams.continuous.anchorage import (
     fits_hook,
     has_hooks,
 )
-from lineproof.beams.continuous.cutoff import STEP, ceil50, far_face, half_of, support_of
+from lineproof.beams.continuous.cutoff import ceil50, far_face, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import serving
 from lineproof.beams.continuous.forces import End, other
@@ -66,15 +66,14 @@ def furthest(designed: Designed, span: int, near: End) -> float:
 def to_the_end(designed: Designed, span: int, near: End, run: BarRun, t: float) -> float:
     """Return where bars end that reach so far: in an end support as far as they can go.
 
-    There they are hooked like the top bars of that support (common practice); where they cannot
-    be anchored in it, they end before it.
+    There they are hooked like the top bars of that support (common practice), if they can be
+    anchored in it.
     """
-    support, face = support_of(span, other(near)), far_face(designed, span, near)
-    if t <= face - BESIDE or not designed.exterior(support):
-        return t
-    if _anchors(designed, support, run):
+    support = support_of(span, other(near))
+    beside = t > far_face(designed, span, near) - BESIDE
+    if beside and designed.exterior(support) and _anchors(designed, support, run):
         return furthest(designed, span, near)
-    return min(t, face // STEP * STEP)
+    return t
 
 
 def _anchors(designed: Designed, support: int, run: BarRun) -> bool:
