@@ -69,6 +69,37 @@ def test_formulas_are_laid_out_as_mathematics(opened: tuple[Page, list[str], lis
     assert page.evaluate("document.documentElement.scrollWidth <= window.innerWidth")
 
 
+# Words of a table that stand on more than one line: "Mark" as "Mar" and "k", "20M" as "20" and "M".
+BROKEN_WORDS = """() => {
+    const range = document.createRange(), broken = [];
+    for (const cell of document.querySelectorAll(".table-frame th, .table-frame td")) {
+        const texts = document.createTreeWalker(cell, NodeFilter.SHOW_TEXT);
+        while (texts.nextNode()) for (const word of texts.currentNode.data.matchAll(/[\\w.]+/g)) {
+            range.setStart(texts.currentNode, word.index);
+            range.setEnd(texts.currentNode, word.index + word[0].length);
+            const tops = [...range.getClientRects()].map((box) => Math.round(box.top));
+            if (new Set(tops).size > 1) broken.push(word[0]);
+        }
+    }
+    return broken;
+}"""
+
+
+@pytest.mark.parametrize("width", [1400, 900, 390])
+def test_no_word_of_a_table_is_parted(
+    opened: tuple[Page, list[str], list[str]], width: int
+) -> None:
+    """On a narrow screen a table is moved sideways in its frame; the page itself stays put."""
+    page, _, _ = opened
+    before = page.viewport_size
+    assert before is not None
+    page.set_viewport_size({"width": width, "height": 1000})
+
+    assert page.evaluate(BROKEN_WORDS) == []
+    assert page.evaluate("document.documentElement.scrollWidth <= window.innerWidth")
+    page.set_viewport_size(before)
+
+
 def test_an_argument_leads_to_the_line_it_comes_from(
     demo: Any,
     opened: tuple[Page, list[str], list[str]],
