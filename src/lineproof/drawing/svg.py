@@ -11,12 +11,16 @@ from lineproof.drawing.paper import BACKING_MARGIN, DASHES, PaperShape, Placed, 
 from lineproof.drawing.shapes import Arc, Circle, Figure, Line, Point, Polyline, Runs
 
 FONT_FAMILY = "Libertinus Serif"
+OTHER_FONTS = "Times New Roman, Times, Liberation Serif, Tinos, serif"
 _SHIFTS = {"sub": SUB_DROP, "sup": -SUP_RISE}
 _STYLES = {"italic": ' font-style="italic"', "bold": ' font-weight="bold"'}
 
 
-def svg(figure: Figure) -> str:
+def svg(figure: Figure, *, any_font: bool = False) -> str:
     """Return the figure as one ``<svg>`` element, sized in mm on paper.
+
+    ``any_font`` is for places that do not carry our font: every text is drawn as wide as it was
+    measured, whatever font stands in, so that none is cut off or runs over its neighbour.
 
     Characters without a glyph print as their code point, such as ``<U+1F600>``. Raises
     :class:`lineproof.errors.UserError` for a figure that :func:`from_json` would refuse.
@@ -24,19 +28,20 @@ def svg(figure: Figure) -> str:
     figure = from_json(to_json(figure))  # the digits a record keeps, so both draw alike
     drawn, texts = lower(figure)
     width, height = _number(figure.width), _number(figure.height)
+    family = f"{FONT_FAMILY}, {OTHER_FONTS}" if any_font else FONT_FAMILY
     lines = [
         (
             f'<svg xmlns="http://www.w3.org/2000/svg" width="{width}mm" height="{height}mm" '
             f'viewBox="0 0 {width} {height}" role="img" aria-label="{_escaped(figure.alt)}" '
             'fill="none" stroke="black" stroke-linecap="butt" stroke-linejoin="miter" '
-            f'font-family="{FONT_FAMILY}" text-rendering="geometricPrecision" xml:space="preserve">'
+            f'font-family="{family}" text-rendering="geometricPrecision" xml:space="preserve">'
         ),
         f"<title>{_escaped(figure.caption or figure.alt)}</title>",
         f"<desc>{_escaped(figure.alt)}</desc>",
     ]
     lines.extend(_shape(shape, figure.height) for shape in drawn)
     lines.extend(_backing(text, figure.height) for text in texts if text.text.backing)
-    lines.extend(_text(text, figure.height) for text in texts)
+    lines.extend(_text(text, figure.height, any_font) for text in texts)
     lines.append("</svg>")
     return "\n".join(line for line in lines if line) + "\n"
 
@@ -118,15 +123,18 @@ def _backing(text: Placed, height: float) -> str:
     return f'<path d="M{path}Z" fill="white" stroke="none"/>'
 
 
-def _text(text: Placed, height: float) -> str:
+def _text(text: Placed, height: float, fitted: bool) -> str:
     x, y = _xy(text.at, height)
     turn = ""
     if text.text.rotation:
         turn = f' transform="rotate({_number(-text.text.rotation)} {x} {y})"'
     size = text.text.size
+    fit = ""
+    if fitted and text.width:
+        fit = f' textLength="{_number(text.width)}" lengthAdjust="spacingAndGlyphs"'
     return (
         f'<text x="{x}" y="{y}" font-size="{_number(size)}" text-anchor="{text.text.anchor}" '
-        f'fill="black" stroke="none"{turn}>{_spans(text.text.runs, size)}</text>'
+        f'fill="black" stroke="none"{turn}{fit}>{_spans(text.text.runs, size)}</text>'
     )
 
 

@@ -216,7 +216,7 @@ def _span(text: str) -> str:
 
 
 def _picture(printed: PrintedRow) -> str:
-    drawn = svg(from_json(printed.figure or {})).encode()
+    drawn = svg(from_json(printed.figure or {}), any_font=True).encode()
     address = "data:image/svg+xml;base64," + base64.b64encode(drawn).decode()
     return f'<img src="{address}" alt="{_text(printed.alt)}" style="max-width:100%">'
 
