@@ -80,9 +80,11 @@ class Desk {
     this.tell(line);
   }
 
-  // Brings a line onto the screen; again when those around it have been laid out.
+  // Brings a line onto the screen; again when those around it have been laid out, if the page moved.
   bringIn(line) {
+    const before = scrollY;
     line.element.scrollIntoView({ block: "nearest" });
+    if (scrollY === before) return;
     requestAnimationFrame(() => requestAnimationFrame(() => {
       if (this.work.line === line) line.element.scrollIntoView({ block: "nearest" });
     }));
