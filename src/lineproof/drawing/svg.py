@@ -41,7 +41,7 @@ def svg(figure: Figure, *, any_font: bool = False) -> str:
     ]
     lines.extend(_shape(shape, figure.height) for shape in drawn)
     lines.extend(_backing(text, figure.height) for text in texts if text.text.backing)
-    lines.extend(_text(text, figure.height, any_font) for text in texts)
+    lines.extend(_text(text, figure.height, fitted=any_font) for text in texts)
     lines.append("</svg>")
     return "\n".join(line for line in lines if line) + "\n"
 
@@ -123,7 +123,7 @@ def _backing(text: Placed, height: float) -> str:
     return f'<path d="M{path}Z" fill="white" stroke="none"/>'
 
 
-def _text(text: Placed, height: float, fitted: bool) -> str:
+def _text(text: Placed, height: float, *, fitted: bool) -> str:
     x, y = _xy(text.at, height)
     turn = ""
     if text.text.rotation:
