@@ -94,6 +94,12 @@ def test_facts_survive_a_project_of_another_shape() -> None:
     assert [fact.value for fact in facts.facts if fact.label == "Codes"] == ["NBC 2015 + A23.3-14"]
 
 
+def test_codes_that_are_no_locked_pair_are_not_printed() -> None:
+    """A sheet of own lines alone meets no beam that would refuse them."""
+    with pytest.raises(UserError, match=r"'NBC 2015 \+ A23\.3:19' is not a locked code pair"):
+        project_facts({"codes": {"pair": "NBC 2015 + A23.3:19"}}, {})
+
+
 def test_every_calculation_says_where_its_beam_stands() -> None:
     """A row of ``locations`` for each; the place of the project where there are no rows."""
     rows = {"locations": [{"calc": "B7", "grid": "C/2-5", "level": "2"},

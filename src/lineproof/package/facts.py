@@ -9,6 +9,7 @@ from functools import partial
 from typing import Any
 
 from lineproof.errors import UserError
+from lineproof.standards.codes import code_pair
 
 STATUSES = ("preliminary", "for review", "for permit", "for construction")
 FINAL_STATUSES = ("for permit", "for construction")
@@ -66,7 +67,7 @@ def project_facts(
 ) -> ProjectFacts:
     """Read the facts of a project and of the calculations named.
 
-    Raises :class:`UserError` for a wrong date or paper size.
+    Raises :class:`UserError` for a wrong date, status or paper size, or codes that are no pair.
     """
     facts = _Tables(project)
     date_text = facts.text("issue", "date")
@@ -151,7 +152,9 @@ def _locations(facts: _Tables, calcs: Sequence[str]) -> tuple[Fact, ...]:
 
 
 def _pair(facts: _Tables, codes: Mapping[str, Any]) -> str:
-    return _text(codes, "pair") or facts.text("codes", "pair")
+    """Return the locked pair; on a sheet of own lines alone no beam would refuse another."""
+    pair = _text(codes, "pair") or facts.text("codes", "pair")
+    return code_pair(pair).name if pair else ""
 
 
 def _criteria(facts: _Tables, codes: Mapping[str, Any]) -> tuple[Fact, ...]:
