@@ -101,6 +101,13 @@ def test_another_exception_is_named_in_one_line(unrun: Notebook, tmp_path: Path)
     assert fault == "beam.ipynb: cell 7 (1/0): ZeroDivisionError: division by zero"
 
 
+def test_a_deleted_input_is_told_with_what_to_do(unrun: Notebook, tmp_path: Path) -> None:
+    unrun["cells"][2]["source"] = 'A_s = "2500 mm2"'
+    (fault,) = faults_of(unrun, tmp_path)
+    assert fault.startswith('beam.ipynb: cell 4 (sheet = Sheet("B1", "Test beam B1")): NameError: ')
+    assert fault.endswith("name 'M_f' is not defined; give it in a cell above this one")
+
+
 def test_a_python_that_dies_is_named(unrun: Notebook, tmp_path: Path) -> None:
     (fault,) = faults_of(with_code(unrun, "import os; os._exit(3)"), tmp_path)
     assert fault.startswith("beam.ipynb: Python stopped while running it (")

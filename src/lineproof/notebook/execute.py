@@ -180,5 +180,7 @@ def _said(output: Mapping[str, Any]) -> list[str]:
     lines = [str(line) for line in output.get("traceback", ())]
     if lines and all(line.startswith(SHOWN_PREFIX) for line in lines):
         return [line.removeprefix(SHOWN_PREFIX) for line in lines]
-    value = str(output.get("evalue", "")).strip().splitlines()
-    return [": ".join(filter(None, [str(output.get("ename", "")), value[-1] if value else ""]))]
+    kind, value = str(output.get("ename", "")), str(output.get("evalue", "")).strip().splitlines()
+    told = ": ".join(filter(None, [kind, value[-1] if value else ""]))
+    # The usual cause is a line of the inputs that was deleted or misspelled.
+    return [f"{told}; give it in a cell above this one" if kind == "NameError" else told]
