@@ -680,3 +680,21 @@ def test_a_long_package_is_stepped_through_by_key(opened: Open) -> None:
     box = page.locator(".rv-here").bounding_box()
     assert box is not None
     assert 0 <= box["y"] <= 900
+
+
+def test_high_contrast_shows_what_is_pressed(browser: Browser, tmp_path: Path) -> None:
+    """The system's colours replace ours; a pressed button must still differ from the others."""
+    path = tmp_path / "beam.html"
+    path.write_text(to_html(build_package([beam()])), encoding="utf-8")
+    page = browser.new_page(forced_colors="active")
+    page.goto(path.as_uri())
+    page.get_by_role("button", name="Review", exact=True).click()
+    colours = page.evaluate(
+        "[...document.querySelectorAll('[data-do^=args]')].map(e =>"
+        " [e.getAttribute('aria-pressed'), getComputedStyle(e).backgroundColor])"
+    )
+    page.close()
+    pressed = {colour for truth, colour in colours if truth == "true"}
+    others = {colour for truth, colour in colours if truth == "false"}
+    assert len(pressed) == len(others) == 1
+    assert pressed != others
