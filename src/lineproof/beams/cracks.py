@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping
 
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.flexure import midspan
@@ -55,24 +54,35 @@ def _area_of(sheet: Sheet, size: str) -> Entry:
 def skin_inside(steps: Steps, exposure: str) -> None:
     """Record the skin reinforcement inside the open part, if the beam is that deep."""
     if steps.decide(clause.NEEDS_SKIN):
-        _record_skin(steps.sheet, steps, exposure_kind(exposure))
+        A_bk = record_skin_area(steps, exposure, SKIN_BAR)
+        each = bars_each_face(steps.place["A_sk"].value, steps.place["h_sk"].value, A_bk.value)
+        record_skin_bars(steps, A_bk, each, "chosen")
 
 
-def _record_skin(sheet: Sheet, steps: Steps, kind: str) -> None:
-    d_bk = sheet.lookup("d_bk", bars.BARS, SKIN_BAR, "d_b", title="diameter of the skin bars")
-    sheet.lookup("rho_sk", clause.LIMITS, kind)
+def record_skin_area(steps: Steps, exposure: str, size: str) -> Entry:
+    """Record inside the open part the skin reinforcement required; return the area of one bar."""
+    sheet = steps.sheet
+    d_bk = sheet.lookup("d_bk", bars.BARS, size, "d_b", title="diameter of the skin bars")
+    steps.bind(rho_sk=sheet.lookup("rho_sk", clause.LIMITS, exposure_kind(exposure)))
     steps.line(clause.SKIN_DEPTH, d_b=d_bk)
     steps.lines(clause.SKIN_HEIGHT, clause.SKIN_WIDTH, clause.SKIN_STRIPS, clause.SKIN_AREA)
-    A_bk = sheet.lookup("A_bk", bars.BARS, SKIN_BAR, "A_b", title="area of one skin bar")
-    each_face = _bars_each_face(steps.place, A_bk.value)
-    n_k = sheet.given("n_k", str(each_face), "number of skin bars on each face", source="chosen")
-    sheet.check(clause.SKIN_PROVIDED, n_k=n_k, A_bk=A_bk)
-    steps.line(clause.SKIN_SPACING, n_k=n_k)
-    steps.check(clause.SKIN_CLOSE)
+    return sheet.lookup("A_bk", bars.BARS, size, "A_b", title="area of one skin bar")
 
 
-def _bars_each_face(place: Mapping[str, Entry], area: float) -> int:
-    """Return the bars a face needs for the area and for a spacing of at most 200 mm."""
-    for_area = math.ceil(float(place["A_sk"].value) / 2 / area)
-    for_spacing = math.ceil(float(place["h_sk"].value) / clause.SKIN_SPACING_MOST)
-    return max(for_area, for_spacing, 1)
+def record_skin_bars(steps: Steps, A_bk: Entry, each: int, source: str) -> None:
+    """Record inside the open part the skin bars of a strip at each face, and their checks."""
+    what = "number of skin bars on each face"
+    n_k = steps.sheet.given("n_k", str(each), what, source=source)
+    steps.check(clause.SKIN_PROVIDED, n_k=n_k, A_bk=A_bk)
+    if each:  # else there is no distance
+        steps.line(clause.SKIN_SPACING, n_k=n_k)
+        steps.check(clause.SKIN_CLOSE)
+
+
+def bars_each_face(A_sk: float, h_sk: float, A_b: float) -> int:
+    """Return the bars of a strip at each face for its area, at most 200 mm apart.
+
+    ``A_sk`` [mm2] is that of both faces, ``h_sk`` [mm] the height of a strip, ``A_b`` [mm2] the
+    area of a bar.
+    """
+    return max(math.ceil(A_sk / 2 / A_b), math.ceil(h_sk / clause.SKIN_SPACING_MOST), 1)

@@ -232,7 +232,7 @@ def _record_table(steps: Steps, designed: Designed, bar: Bar, symbol: str) -> No
 
 def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
     """Record every kind of lap in a part: size, length against what is laid, room for concrete."""
-    designed, kept = writers.designed, tuple(runs)
+    designed, kept = writers.designed, tuple(r for r in runs if r.place != "side face")
     pairs = [
         (kept[i], kept[j])
         for i, j in sorted(level_pairs(designed, kept), key=lambda p: kept[p[1]].start)

@@ -50,6 +50,7 @@ from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import Standing, stand
 from lineproof.beams.continuous.resistance_cover import Coverage, covered
 from lineproof.beams.continuous.shear_stretches import basis_of, span_numbers, stretches_of
+from lineproof.beams.continuous.skin import SideBars, side_bars, skin_runs
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.errors import UserError
 from lineproof.standards.codes import CodePair
@@ -82,9 +83,9 @@ class Design:
 
     @property
     def detailing(self) -> Detailing:
-        """Bars and stirrups, the ties around hooks included."""
+        """Bars and stirrups, skin bars and the ties around hooks included."""
         ties = hook_ties(self.designed, self.runs)
-        return Detailing(self.runs, (*self.stirrups.zones, *ties))
+        return Detailing((*self.runs, *self._skin), (*self.stirrups.zones, *ties))
 
     @property
     def given(self) -> bool:
@@ -123,6 +124,16 @@ class Design:
     def standing(self) -> tuple[Standing, ...]:
         """The bars along the beam with the lengths over which their stress rises."""
         return stand(self.designed, self.runs)
+
+    def side_bars(self, span: int, x: float) -> SideBars:
+        """Return the bars of the side faces at a place along the beam."""
+        return side_bars(self.designed, self.detailing.bars, span, x)
+
+    @cached_property
+    def _skin(self) -> tuple[BarRun, ...]:
+        """The skin bars that are laid here; those of given bars stand among these."""
+        exposure = self.model.inputs.exposure
+        return () if self.given else skin_runs(self.designed, exposure)
 
     def _place(self, face: Face) -> float:
         """Return where a face stands along the beam."""

@@ -24,7 +24,7 @@ from lineproof.standards.codes import CodePair
 
 KEYS = ("face", "bars", "start", "end", "layer", "place", "hook_start", "hook_end", "serves")
 NEEDED = ("face", "bars", "start", "end")
-FACES, HOOKS, PLACES = get_args(Face), get_args(Hook), ("web", "overhang")
+FACES, HOOKS, PLACES = get_args(Face), get_args(Hook), ("web", "overhang", "side face")
 LAYERS = (1, 2)
 MOST_SIZES = 2
 """Sizes of bars that may stand in one layer."""
@@ -44,9 +44,10 @@ def read_given_runs(
     """Read runs of bars and check them against the beam, and against its sections if given.
 
     A row is for example ``{"face": "bottom", "bars": "2-25M", "start": "-0.15 m", "end":
-    "7.75 m"}``, with ``layer`` 2, ``place`` ``overhang``, ``hook_start`` or ``hook_end`` ``90``
-    where they apply. Distances run from the axis of support 1. Raises :class:`UserError` with
-    every fault. Whether the bars carry the moments is for ``covered`` to say.
+    "7.75 m"}``, with ``layer`` 2, ``place`` ``overhang`` or ``side face`` (skin bars, half at each
+    face), ``hook_start`` or ``hook_end`` ``90`` where they apply. Distances run from the axis of
+    support 1. Raises :class:`UserError` with every fault. Whether the bars carry the moments is
+    for ``covered`` to say.
     """
     faults, made = FaultList(), []
     if not rows:

@@ -7,6 +7,7 @@ from collections.abc import Mapping, Sequence
 from lineproof.beams.bars import TopBars, of_one_size
 from lineproof.beams.bottom_bars import bars_inside, for_distance, placed, record_fit_above
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
+from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
     Developed,
@@ -38,7 +39,8 @@ from lineproof.beams.continuous.section_checks import (
     TENSION_AREAS,
     TENSION_WIDTHS,
 )
-from lineproof.beams.cracks import cracks_inside, skin_inside
+from lineproof.beams.continuous.skin import record_skin
+from lineproof.beams.cracks import cracks_inside
 from lineproof.beams.flexure import record_yield, required, resistance
 from lineproof.beams.minimum_steel import minimum_of
 from lineproof.beams.second_path import record_proof
@@ -46,6 +48,7 @@ from lineproof.beams.section import zone_of
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import analysis, bars, flexure, minimum
+from lineproof.standards.a23_3.crack_control import NEEDS_SKIN
 from lineproof.standards.references import MECHANICS
 
 _LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
@@ -130,7 +133,8 @@ def _record_span_bars(
             steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
         )
         cracks_inside(steps, inputs.exposure, layers)
-    skin_inside(steps, inputs.exposure)
+    if steps.decide(NEEDS_SKIN):
+        record_skin(steps, inputs.exposure, design.side_bars(span, sag_at(design.designed, span)))
 
 
 def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
@@ -300,6 +304,9 @@ def _record_face(
     if inputs.slab:
         _check_spread(steps, top)
     cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape])
+    if steps.holds(NEEDS_SKIN):
+        x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
+        record_skin(steps, inputs.exposure, design.side_bars(face.span, x))
     _take(steps, _SHARED)
     made = dict(sheet.part_entries) | dict(counts)
     return {name: made[name] for name in _SHARED if name in made}

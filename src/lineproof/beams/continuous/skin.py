@@ -1,0 +1,141 @@
+"""Skin reinforcement of deep beams (10.6.2) along the beam: the bars of the side faces.
+
+A strip reaches over half the depth, in the span from below, at a support from above. So the bars
+stand evenly over the whole side, as close as the strip that asks for most lets them.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
+
+from lineproof.beams.continuous.anchorage import Bar, develop
+from lineproof.beams.continuous.detailing_data import STOCK, Designed
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.numbers import Numbers, holds, put
+from lineproof.beams.continuous.resistance import section_depth
+from lineproof.beams.cracks import (
+    SKIN_BAR,
+    bars_each_face,
+    exposure_kind,
+    record_skin_area,
+    record_skin_bars,
+)
+from lineproof.beams.steps import Steps
+from lineproof.standards.a23_3 import crack_control as clause
+from lineproof.standards.a23_3.bars import BARS
+
+SIDES = 2
+STEP = 50.0
+"""Lengths of skin bars are steps of this [mm]."""
+
+
+@dataclass(frozen=True, slots=True)
+class SideBars:
+    """Bars of one size at each side face, evenly over the ``height`` between the outer layers."""
+
+    size: str
+    each: int
+    height: float
+
+    def within(self, strip: float) -> int:
+        """Return how many stand within any strip of that height [mm] at each face."""
+        return math.floor(strip * (self.each + 1) / self.height * (1 + 1e-12))
+
+
+def side_height(designed: Designed, span: int) -> float:
+    """Return the height of a side between the outer layers, below the slab [mm]."""
+    outline = designed.outline
+    inset = outline.cover + BARS.number(designed.basis.stirrups.size, "d_b")
+    return outline.depths[span - 1] - inset - max(inset, outline.h_f)
+
+
+def side_bars(designed: Designed, runs: Sequence[BarRun], span: int, x: float) -> SideBars:
+    """Return the bars of the side faces that stand at a place along the beam; none: 0 each.
+
+    Of runs that are lapped there the larger number counts.
+    """
+    there = [r for r in runs if r.place == "side face" and r.start <= x <= r.end]
+    thin = min(there, key=lambda run: run.diameter, default=None)
+    kept: list[BarRun] = []
+    for run in sorted(there, key=lambda run: -run.number):
+        if not any(_lapped(run, other) for other in kept):
+            kept.append(run)
+    each = sum(run.number for run in kept) // SIDES
+    return SideBars(thin.size if thin else SKIN_BAR, each, side_height(designed, span))
+
+
+def _lapped(run: BarRun, other: BarRun) -> bool:
+    """Tell whether one of two runs goes on where the other ends."""
+    first, second = sorted((run, other), key=lambda each: each.start)
+    return first.start < second.start and first.end < second.end
+
+
+def record_skin(steps: Steps, exposure: str, side: SideBars) -> None:
+    """Record inside the open part the skin reinforcement of a section with the bars there."""
+    A_bk = record_skin_area(steps, exposure, side.size)
+    within = side.within(float(steps.entry("h_sk").value))
+    source = "none stand at the side faces"
+    if side.each:
+        source = f"{side.each} at each face, evenly over the side; those within the strip"
+    record_skin_bars(steps, A_bk, within, source)
+
+
+def skin_runs(designed: Designed, exposure: str) -> tuple[BarRun, ...]:
+    """Return the skin bars of all deep spans, lapped where they are longer than the stock."""
+    made: list[BarRun] = []
+    for span in range(1, len(designed.outline.lengths) + 1):
+        each = _each_face(designed, exposure, span)
+        if each:
+            made += _along(designed, span, SIDES * each)
+    return tuple(made)
+
+
+def _each_face(designed: Designed, exposure: str, span: int) -> int:
+    """Return how many bars stand over the whole side of a span at each face; 0: not deep."""
+    h = designed.outline.depths[span - 1]
+    if not holds(clause.NEEDS_SKIN, {"h": h}):
+        return 0
+    A_b = BARS.number(SKIN_BAR, "A_b")
+    spacings = []
+    for d in _depths(designed, span):
+        at: Numbers = {
+            "h": h, "d": d, "b_w": designed.outline.b_w, "c_c": designed.outline.cover,
+            "d_bs": BARS.number(designed.basis.stirrups.size, "d_b"),
+            "d_b": BARS.number(SKIN_BAR, "d_b"),
+            "rho_sk": clause.LIMITS.number(exposure_kind(exposure), "rho_sk"),
+        }  # fmt: skip
+        put(at, clause.SKIN_DEPTH, clause.SKIN_HEIGHT, clause.SKIN_WIDTH, clause.SKIN_STRIPS)
+        put(at, clause.SKIN_AREA)
+        if at["h_sk"] > 0:
+            spacings.append(at["h_sk"] / bars_each_face(at["A_sk"], at["h_sk"], A_b))
+    gaps = side_height(designed, span) / min(spacings, default=clause.SKIN_SPACING_MOST)
+    return max(math.ceil(gaps * (1 - 1e-12)) - 1, 1)
+
+
+def _depths(designed: Designed, span: int) -> Iterator[float]:
+    """Give the depths of the sections of a span whose tension face has a strip."""
+    if not designed.cantilever(span):
+        yield section_depth(designed, "bottom", span)
+    for support in (span, span + 1):
+        if designed.held(support) and designed.bars.top[support - 1].web:
+            yield section_depth(designed, "top", span, support)
+
+
+def _along(designed: Designed, span: int, number: int) -> Iterator[BarRun]:
+    """Give the skin bars of a span, lapped at inner supports and where they exceed the stock."""
+    outline, last = designed.outline, len(designed.outline.lengths)
+    size = Bar("top", "web", 1, SKIN_BAR, SIDES, outline.depths[span - 1])
+    lap = math.ceil(develop(designed.basis, size).lap / STEP) * STEP
+    low, high = outline.ends
+    start = low + designed.end_cover if span == 1 else outline.axes[span - 1] - lap / 2
+    end = high - designed.end_cover if span == last else outline.axes[span] + lap / 2
+    pieces = max(math.ceil((end - start - lap) / (STOCK - lap)), 1)
+    step = (end - start - lap) / pieces
+    for piece in range(pieces):
+        first = start + piece * step
+        yield BarRun(
+            "bottom", 1, number, SKIN_BAR, first, first + step + lap, "side face",
+            serves=f"skin of span {span}",
+        )  # fmt: skip

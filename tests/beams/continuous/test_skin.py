@@ -1,0 +1,74 @@
+"""Skin bars of deep beams: at spans and supports, and in schedule and drawings (10.6.2).
+
+By hand, h = 900, cover 30, stirrup 10M (11.3), bars 20M (19.5), skin bars 10M (11.3, 100 mm2), slab
+140: d = 900 - 30 - 11.3 - 9.75 = 848.95; strip 0.5*900 - 2*51.05 = 347.9 high and 2*(30 + 11.3 +
+5.65) = 93.9 wide; A_sk = 0.008*2*347.9*93.9 = 522.7 mm2, so 3 bars a strip, 347.9/3 = 116 mm. The
+side is 900 - 41.3 - 140 = 718.7 high: 718.7/116 = 6.2 gaps, so 7 gaps and 6 bars at each face.
+"""
+
+from __future__ import annotations
+
+import json
+from collections.abc import Mapping
+from typing import Any
+
+import pytest
+
+from lineproof.beams.continuous.cures_tried import row_of
+from lineproof.record import Record
+
+from .flow import record_of, run, start
+
+DEEP: Mapping[str, Any] = {
+    "spans": ["2.8 m", "9 m"],
+    "supports": ["free", "column 450 mm", "wall 400 mm"],
+    "h": "900 mm", "b_w": "400 mm",
+    "loads": [{"type": "D", "span": 1, "line": "40 kN/m", "what": "facade"}],
+}  # fmt: skip
+
+
+@pytest.fixture(scope="module")
+def deep() -> Record:
+    """Return the record of a deep beam with a cantilever, all bars chosen."""
+    return record_of(**DEEP)
+
+
+@pytest.mark.parametrize("part", ["sag-2", "hog-2-right"])
+def test_spans_and_supports_have_skin_bars(deep: Record, part: str) -> None:
+    assert deep.entries[f"{part}/A_sk"]["value"] == pytest.approx(522.7, abs=0.05)
+    assert deep.entries[f"{part}/n_k"]["value"] == 3
+    assert deep.entries[f"{part}/s_sk"]["value"] == pytest.approx(116.0, abs=0.05)
+    assert deep.entries[f"{part}/skin-area"]["holds"]
+
+
+def test_skin_bars_stand_in_schedule_and_drawings(deep: Record) -> None:
+    """Six at each face from end to end; the schedule counts the laps: 2 x 12 bars."""
+    rows = deep.entries["schedule/bars"]["rows"]
+    skin = [row for row in rows if row[0].startswith("F")]
+    assert sum(int(row[2]) for row in skin) == 24
+    assert {row[1] for row in skin} == {"10M"}
+    drawn = json.dumps(deep.entries["summary/elevation-1"])
+    assert "F01" in drawn
+    assert "F02" in drawn
+
+
+def test_a_cantilever_alone_has_skin_bars() -> None:
+    """No span sags: the strip at its root alone; 15M top bars, d = 850.7, strip 351.4 mm."""
+    made = record_of(
+        spans=["2.8 m"], supports=["wall 400 mm, fixed", "free"], h="900 mm", b_w="400 mm"
+    )
+    assert made.entries["hog-1-right/A_sk"]["value"] == pytest.approx(
+        0.008 * 2 * 351.4 * 93.9, abs=0.05
+    )
+    assert made.entries["hog-1-right/skin-area"]["holds"]
+
+
+def test_given_bars_without_skin_bars_fail() -> None:
+    """Bars as built, none at the side faces: the check fails; with those of the design it holds."""
+    beam = start(**DEEP)
+    run(beam)
+    bare = record_of(**DEEP, bar_runs=[row_of(each) for each in beam.design.runs])
+    assert {"sag-2/skin-area", "hog-2-right/skin-area"} <= set(bare.failed)
+    whole = record_of(**DEEP, bar_runs=[row_of(each) for each in beam.design.detailing.bars])
+    assert whole.entries["sag-2/n_k"]["value"] == 3
+    assert not {name for name in whole.failed if "skin" in name}
