@@ -54,3 +54,31 @@ def test_construction_stage_by_hand() -> None:
     assert entries["deflection-1-construction/M_ae2"]["value"] == pytest.approx(0.1 * w * 64)
     assert entries["deflection-1-construction/M_aem"]["value"] == pytest.approx(0.075 * w * 64)
     assert entries["deflection-1-dead/M_am"]["value"] == pytest.approx(0.075 * w * 64)
+
+
+@pytest.mark.parametrize("free", ["left", "right"])
+def test_the_construction_stage_cracks_the_root_of_a_cantilever(free: str) -> None:
+    """A cantilever of 2.6 m, 380 x 450, slab 140 on 3.1 m: its root cracks while it is built.
+
+    By hand: w_D = 24(0.14*3.1 + 0.38*0.31) + 1.8*3.1 = 18.8232 kN/m, w_cn = 12*3.1 = 37.2 kN/m,
+    56.0232*2.6^2/2 = 189.358 kN.m, more than under dead and live load (2.4 kPa): 26.2632*3.38 =
+    88.770 kN.m. So I_e is the same in all stages, with M_crdn = 0.3 sqrt(32)*380*450^2/6 =
+    21.7647 kN.m and I_gw = 380*450^3/12: I_cr + (I_gw - I_cr)(21.7647/189.358)^3.
+    """
+    supports, spans = ["free", "column 400 mm", "wall 300 mm"], ["2.6 m", "6 m"]
+    if free == "right":
+        supports, spans = supports[::-1], spans[::-1]
+    beam = analysed(
+        spans=spans, supports=supports, h="450 mm", use="office", construction_load="12 kPa"
+    )
+    beam.flexure()
+    beam.deflections()
+    key = f"deflection-{1 if free == 'left' else 2}"
+    root = beam.sheet.entries_of(f"{key}-construction")["M_ae1"]
+    assert root.value == pytest.approx(189.358e6, rel=1e-5)
+    I_cr = beam.sheet.entries_of(f"{key}-sections")["I_cr1"].value
+    I_e = I_cr + (380 * 450**3 / 12 - I_cr) * (21.7647 / 189.358) ** 3
+    for stage in ("dead", "sustained", "all"):
+        entries = beam.sheet.entries_of(f"{key}-{stage}")
+        assert entries["I_e1"].value == pytest.approx(I_e, rel=1e-5)
+    assert entries["M_h"].value == pytest.approx(88.770e6, rel=1e-5)

@@ -98,7 +98,7 @@ def _stages(
 ) -> Iterator[tuple[str, Mapping[Row, float]]]:
     """Give name and load factors of every stage, that of construction first, then its own."""
     service = services[span]
-    if model.inputs.construction_load is not None and not service.free:
+    if model.inputs.construction_load is not None:
         kind, w_cn = model.inputs.live_kind, model.sheet.entry(f"{LOADS}/w_cn").value
         spans = range(1, model.spans + 1)
         yield (

@@ -125,10 +125,10 @@ def _record_span(
 
 
 def _earlier(model: Model, span: int) -> dict[str, Entry]:
-    """Record the moments of the construction stage, if there is one that the span feels."""
-    if model.inputs.construction_load is None or model.forces.beam.cantilever(span):
+    """Record the moments of the construction stage, if there is one."""
+    if model.inputs.construction_load is None:
         return {}
-    title = f"Deflection of span {span}: construction stage"
+    title = f"Deflection of {name_of(model, span)}: construction stage"
     with model.sheet.part(deflection_key(span, "construction"), title):
         model.sheet.note(
             "construction", _CONSTRUCTION, title="Construction stage", clause="9.8.2.3"

@@ -146,27 +146,21 @@ class _Lines:
         self.record_span(names["left"], names["right"], "M_mb", "w_sb")
 
     def record_earlier(self) -> dict[str, Entry]:
-        """Record moments of dead load and a load per length ``w_cn`` on all spans."""
-        entries = self.model.sheet.entries_of(ANALYSIS)
+        """Record moments of dead load and a load per length ``w_cn`` on all spans.
+
+        Of a cantilever that at its root alone.
+        """
         w_cn = self.model.sheet.entry(f"{LOADS}/w_cn")
         self.names["w_cn"] = w_cn
-        kind = self.model.inputs.live_kind
         ends = []
         sides: tuple[tuple[End, str], ...] = (("left", "M_ae1"), ("right", "M_ae2"))
+        if self.model.forces.beam.cantilever(self.span):
+            root: End = "left" if self.model.inputs.supports[self.span].kind == "free" else "right"
+            made = self._earlier_end(root, "M_ae1", "at the root")
+            return {made.symbol: made}
         for end, symbol in sides:
-            if not self._any(end):
-                continue
-            dead = moment_name(self.model, Group("D", 0), self.span, end)
-            self.names[dead] = entries[dead]
-            terms = []
-            for k in range(1, self.model.spans + 1):
-                name = moment_name(self.model, Group(kind, k), self.span, end)
-                if name:
-                    load = f"w_{code(kind)}{k}"
-                    self.names |= {name: entries[name], load: self.model.uniform[kind, k]}
-                    terms.append(f"{name}/{load}")
-            text = f"{symbol} = -({dead} + w_cn*({' + '.join(terms)}))"
-            ends.append(self._line(text, "kN.m", f"Hogging moment at the {end} support"))
+            if self._any(end):
+                ends.append(self._earlier_end(end, symbol, f"at the {end} support"))
         w_D = f"w_D{self.span}"
         self.names[w_D] = self.model.uniform["D", self.span]
         terms = [f"({w_D} + w_cn)*l**2/8", *(self._at_middle(load) for load in self._single())]
@@ -174,6 +168,21 @@ class _Lines:
         text = f"M_aem = {' + '.join(terms)}".replace("+ -", "- ")
         middle = self._line(text, "kN.m", "Moment at midspan")
         return {entry.symbol: entry for entry in (*ends, middle)}
+
+    def _earlier_end(self, end: End, symbol: str, where: str) -> Entry:
+        """Record the hogging moment of dead load and w_cn at one axis."""
+        entries, kind = self.model.sheet.entries_of(ANALYSIS), self.model.inputs.live_kind
+        dead = moment_name(self.model, Group("D", 0), self.span, end)
+        self.names[dead] = entries[dead]
+        terms = []
+        for k in range(1, self.model.spans + 1):
+            name = moment_name(self.model, Group(kind, k), self.span, end)
+            if name:
+                load = f"w_{code(kind)}{k}"
+                self.names |= {name: entries[name], load: self.model.uniform[kind, k]}
+                terms.append(f"{name}/{load}")
+        text = f"{symbol} = -({dead} + w_cn*({' + '.join(terms)}))"
+        return self._line(text, "kN.m", f"Hogging moment {where}")
 
     def record_at(self, x: Entry, earlier: Mapping[str, Entry]) -> Entry:
         """Record the moment at a place from the loads and the moments at the axes; its size."""
