@@ -40,6 +40,7 @@ from lineproof.beams.continuous.model import (
     model_of,
     span_key,
 )
+from lineproof.beams.continuous.reactions import ties_not_covered
 from lineproof.beams.continuous.resistance_cover import COVERAGE, Gap, covered
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
@@ -147,10 +148,11 @@ class ContinuousBeam:
         with self.sheet.chapter(ANALYSIS_CALL):
             if self.inputs.forces_file is not None:
                 record_imported_analysis(self.model)
-                return
-            record_analysis(self.model)
-            if self.model.spans > 1:
-                record_coefficients(self.model)
+            else:
+                record_analysis(self.model)
+                if self.model.spans > 1:
+                    record_coefficients(self.model)
+        _tell_not_covered(self.sheet, self.inputs)
 
     def flexure(self) -> None:
         """Record bars and resistance at every span and both faces of every support."""
@@ -282,10 +284,16 @@ def continuous_beam(
     beam = ContinuousBeam(sheet, inputs, pair)
     if not sheet.expected:
         sheet.expect(calls_of(inputs))
-    sheet.not_covered = [*not_covered(inputs), *not_here(inputs)]
+    _tell_not_covered(sheet, inputs)
     load_take_down.record_given(sheet, inputs)
     basics.record_materials(sheet, inputs.density, inputs.grade, pair, whole_beam=True)
     return beam
+
+
+def _tell_not_covered(sheet: Sheet, inputs: ContinuousInputs) -> None:
+    """Say what is not covered: by the inputs, and by the analysis if it has been made."""
+    rows = [*not_covered(inputs), *not_here(inputs), *ties_not_covered(sheet)]
+    sheet.not_covered = rows
 
 
 def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
@@ -299,7 +307,23 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
         rows.append({"check": "Girders turned by the end moments", "clause": "11.3.10"})
     if not inputs.slab:
         rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
-    return [*rows]
+    return [*rows, *_loads_not_here(inputs)]
+
+
+def _loads_not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
+    """Return what certain loads would ask for beyond what is calculated."""
+    own = inputs.forces_file is None
+    rows = []
+    if any(load.form == "point" for load in inputs.loads):
+        what = "Hanger stirrups where beams carried from the side bring in point loads"
+        rows.append({"check": what, "clause": "11.2.12"})
+    if own and inputs.partitions is not None:
+        what = "Uplift and stress reversal with the partitions taken away"
+        rows.append({"check": what, "clause": "NBC 4.1.4.1"})
+    if own and (inputs.snow is not None or any(load.kind == "S" for load in inputs.loads)):
+        what = "Snow on parts of the beam only: it lies on all spans here"
+        rows.append({"check": what, "clause": "NBC 4.1.6.3"})
+    return rows
 
 
 def _begin(sheet: Sheet, basis: str, *, anew: bool) -> None:

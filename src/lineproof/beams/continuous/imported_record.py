@@ -15,6 +15,7 @@ from lineproof.beams.continuous.imported_case import case_symbols, record_statio
 from lineproof.beams.continuous.imported_forces import ForcesFile, ImportedForces, Piece
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import ANALYSIS, Model
+from lineproof.beams.continuous.reactions import note_uplift
 from lineproof.beams.continuous.symbols import notation, numbered, required
 from lineproof.beams.steps import Steps
 from lineproof.record.printing import in_unit
@@ -97,6 +98,10 @@ def record_imported_analysis(model: Model) -> None:
         )  # fmt: skip
         columns, reactions = imported_reactions(model)
         sheet.table("imported-reactions", columns, reactions, title=REACTIONS_TITLE)
+        for support in range(1, model.spans + 2):
+            R = _reactions_of(forces, support)
+            if min(R) < -TOLERANCE * max(abs(each) for each in R):
+                note_uplift(sheet, support)
         _record_take_down(model, forces)
         sheet.note("reactions-source", _reactions_text(file), title="Reactions")
 

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
 
-from lineproof.beams.analysis.arrangements import LIVE
+from lineproof.beams.analysis.arrangements import LIVE, Combination, factored_combinations
+from lineproof.beams.continuous.case_forces import factor_text
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.groups import (
     Group,
@@ -15,10 +16,12 @@ from lineproof.beams.continuous.groups import (
     uniform_name,
     where,
 )
-from lineproof.beams.continuous.model import Model, SingleLoad
+from lineproof.beams.continuous.loads import kind_text
+from lineproof.beams.continuous.model import ANALYSIS, Model, SingleLoad
 from lineproof.beams.continuous.symbols import KINDS, code, required, stated
 from lineproof.formula.grammar import LONGEST
 from lineproof.record import Entry
+from lineproof.sheet import Sheet
 
 Scopes = Mapping[Group, Mapping[str, Entry]]
 
@@ -26,6 +29,7 @@ UPLIFT = (
     "The least reaction of support {support} is negative: the beam lifts off unless it is held "
     "down. Tie it to the support for this force, or weigh it down; that tie is not checked here."
 )
+_LIFTS = "uplift-"
 PIECE = 12
 """Terms of a sum in one line, where all are too many for one."""
 
@@ -34,16 +38,19 @@ def record_reactions(model: Model, scopes: Scopes) -> None:
     """Record inside the open part every support's reaction by group, then sums and equilibrium.
 
     For live load the largest reaction has it on those spans only that raise it, the smallest on
-    those that lower it.
+    those that lower it. The least factored reaction of a support is that of all load types.
     """
     supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
     for group, scope in scopes.items():
         made = {j: _reaction(model, group, scope, j) for j in supports}
         _check_equilibrium(model, group, scope, [e for e in made.values() if e is not None])
-    for kind in dict.fromkeys(group.kind for group in scopes if group.kind in LIVE):
+    kinds = tuple(dict.fromkeys(group.kind for group in scopes))
+    for kind in (kind for kind in kinds if kind in LIVE):
         for j in supports:
             _largest(model, kind, scopes, j)
             _smallest(model, kind, scopes, j)
+    for j in supports:
+        _least(model, kinds, j)
 
 
 def _reaction(model: Model, group: Group, scope: Mapping[str, Entry], support: int) -> Entry | None:
@@ -139,18 +146,61 @@ def _largest(model: Model, kind: str, scopes: Scopes, support: int) -> None:
 
 
 def _smallest(model: Model, kind: str, scopes: Scopes, support: int) -> None:
-    """Record the smallest reaction of live load, and with dead load whether the beam lifts off."""
-    sheet, name = model.sheet, f"{support}{code(kind)}"
+    """Record the smallest reaction of live load, where it lowers it."""
     lowering = _of_kind(model, kind, scopes, support, -1.0)
-    if not lowering:
+    if lowering:
+        title = (
+            f"Smallest reaction of support {support}, {KINDS[kind]} where it lowers it, unfactored"
+        )
+        text = f"R_m{support}{code(kind)} = {' + '.join(lowering)}"
+        model.sheet.line(stated(text, title=title))
+
+
+def _least(model: Model, kinds: Sequence[str], support: int) -> None:
+    """Record the least factored reaction where anything lowers it, and whether the beam lifts off.
+
+    A load that lowers it has its largest factor: dead load that does so is no counterweight.
+    """
+    sheet, entries = model.sheet, model.sheet.part_entries
+    names = {kind: f"R_{'m' if kind in LIVE else ''}{support}{code(kind)}" for kind in kinds}
+    values = {kind: entries[name].value for kind, name in names.items() if name in entries}
+    if not any(value < 0 for value in values.values()):
         return
-    title = f"Smallest reaction of support {support}, {KINDS[kind]} where it lowers it, unfactored"
-    sheet.line(stated(f"R_m{name} = {' + '.join(lowering)}", title=title))
-    title = f"Least factored reaction of support {support}, dead and {KINDS[kind]}"
-    least = sheet.line(stated(f"R_u{name} = 0.9*R_{support}D + 1.5*R_m{name}", title=title,
-                              clause="NBC 4.1.3.2"))  # fmt: skip
-    if least.value < 0:
-        sheet.note(f"uplift-{name}", UPLIFT.format(support=support), title="Uplift")
+
+    def sum_of(each: Combination) -> float:
+        return sum(f * values.get(kind, 0.0) for kind, f in each.factors)
+
+    least = min(factored_combinations(kinds), key=sum_of)
+    terms = [(kind, factor_text(f)) for kind, f in least.factors if kind in values]
+    what = " + ".join(f"{factor}{kind_text(kind)}" for kind, factor in terms)
+    text = " + ".join(f"{factor}*{names[kind]}" for kind, factor in terms)
+    made = sheet.line(
+        stated(
+            f"R_u{support} = {text}", clause="NBC 4.1.3.2",
+            title=f"Least factored reaction of support {support}: {what}",
+        )
+    )  # fmt: skip
+    if made.value < 0:
+        note_uplift(sheet, support)
+
+
+def note_uplift(sheet: Sheet, support: int) -> None:
+    """Record inside the open part of the analysis that the beam lifts off a support."""
+    sheet.note(f"{_LIFTS}{support}", UPLIFT.format(support=support), title="Uplift")
+
+
+def ties_not_covered(sheet: Sheet) -> list[Mapping[str, str]]:
+    """Return what the analysis as it stands leaves uncovered: ties where the beam lifts off."""
+    entries = next((part.entries for part in sheet.parts if part.key == ANALYSIS), {})
+    notes = (key for key in entries if key.startswith(_LIFTS))
+    return [
+        {
+            "check": f"Tie that holds the beam down at support {key.removeprefix(_LIFTS)}, which "
+            "it lifts off without",
+            "clause": "NBC 4.1.3.2",
+        }
+        for key in notes
+    ]
 
 
 def _of_kind(model: Model, kind: str, scopes: Scopes, support: int, sign: float) -> list[str]:

@@ -87,13 +87,12 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                 f"reaction of support {support}, {KINDS[group.kind]}, unfactored",
             )
             if group.kind in LIVE:
-                for letter, which in (("m", "smallest"), ("u", "least factored")):
-                    yield numbered(
-                        f"R_{letter}{support}{code(group.kind)}",
-                        "R",
-                        f"{letter},{sub}",
-                        f"{which} reaction of support {support}, {KINDS[group.kind]}",
-                    )
+                yield numbered(
+                    f"R_m{support}{code(group.kind)}",
+                    "R",
+                    f"m,{sub}",
+                    f"smallest reaction of support {support}, {KINDS[group.kind]}",
+                )
             if group.span:
                 yield numbered(
                     f"R_{support}{group.code}",
@@ -101,3 +100,6 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                     f"{support},{group.text}",
                     f"reaction of support {support}, {words}, unfactored",
                 )
+    for support in range(1, model.spans + 2):
+        what = f"least factored reaction of support {support}"
+        yield numbered(f"R_u{support}", "R", f"u,{support}", what)

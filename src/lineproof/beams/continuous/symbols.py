@@ -42,7 +42,7 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"[ase]_x\d+", "m"),
         (r"M_\d+[lr]?(D|S|L\d+|Lst\d+)", "kN.m"),
         (r"R_\d+(D|S|L\d*|Lst\d*)", "kN"),
-        (r"R_[mu]\d+(L|Lst)", "kN"),
+        (r"R_m\d+(L|Lst)|R_u\d+", "kN"),
         (r"[RW]_p\d+(D|S|L\d*|Lst\d*)", "kN"),
         (r"F_\d+[ab](D|S|L\d+|Lst\d+)", "kN.m2"),
         (r"x_[ijs]", "m"),
