@@ -44,11 +44,15 @@ class Fitting:
 
     @classmethod
     def of(cls, state: SpanState) -> Fitting:
-        """Take what counts from the state of a span."""
+        """Take what counts from the state of a span: at a load, of both its sides."""
         basis, (start, end) = state.basis, state.faces
+        u, place = np.unique(state.columns - start, return_inverse=True)
+        required, allowed = np.zeros(len(u)), np.full(len(u), np.inf)
+        np.maximum.at(required, place, state.required / RESERVE)
+        np.minimum.at(allowed, place, state.largest_spacing)
         return cls(
-            end - start, state.h, basis.d_bs, state.columns - start, state.required / RESERVE,
-            state.largest_spacing, 2 * (basis.b_w + state.h - 4 * basis.cover),
+            end - start, state.h, basis.d_bs, u, required, allowed,
+            2 * (basis.b_w + state.h - 4 * basis.cover),
         )  # fmt: skip
 
     @cached_property
