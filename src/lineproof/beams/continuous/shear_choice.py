@@ -57,14 +57,10 @@ class Fitting:
 
     @cached_property
     def widest(self) -> Floats:
-        """The widest spacing at each station; on either side of a point load that of both."""
+        """The widest spacing at each station."""
         strength = np.full_like(self.required, np.inf)
         np.divide(1.0, self.required, out=strength, where=self.required > 0)
-        each = np.minimum(strength, self.allowed) * _ROOM
-        places, place = np.unique(self.u.round(6), return_inverse=True)
-        least = np.full(len(places), np.inf)
-        np.minimum.at(least, place, each)
-        made: Floats = least[place]
+        made: Floats = np.minimum(strength, self.allowed) * _ROOM
         return made
 
     def passes(self, spacing: float) -> Truths:
