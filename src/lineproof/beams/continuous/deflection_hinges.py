@@ -26,7 +26,7 @@ from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import LOADS, Model
 from lineproof.beams.continuous.resistance import provide
 from lineproof.beams.continuous.resistance_cover import FACES
-from lineproof.beams.continuous.service import record_at
+from lineproof.beams.continuous.service import BUILDING, record_at
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -37,7 +37,6 @@ from lineproof.standards.references import MECHANICS
 STATIONS = 201
 """Evenly spaced stations of a span that are looked at, besides the ends of its bars."""
 ROUND_OFF = 1e-9
-_CONSTRUCTION = "dead and construction load"
 _NOTE = (
     "Under this moment the concrete cracks where no bars count: nothing bends there but a hinge. "
     "No deflection is given, and the span does NOT hold; bars that cross the crack are needed."
@@ -47,27 +46,35 @@ _BESIDE = (
     "it: the moments here were found without that hinge and are no longer those of the beam. No "
     "deflection is given, and the span does NOT hold."
 )
-_TITLE = "Span {hinge}, with which this span is continuous: moment beyond that of cracking where "
-_TITLE += "no bars count"
+_TITLE = (
+    "Span {hinge}, with which this span is continuous: moment beyond that of cracking where no "
+    "bars count"
+)
+
+
+@dataclass(frozen=True, eq=False, slots=True)
+class Loading:
+    """Loads under which a span is looked at: in words, and by what each load counts.
+
+    ``building`` tells the stage of construction, of which the moments at the axes are recorded.
+    """
+
+    words: str
+    factors: Mapping[Row, float]
+    building: bool = False
 
 
 @dataclass(frozen=True, eq=False, slots=True)
 class Hinge:
-    """The worst place of a span at which it cracks without bars, at the first such stage.
+    """The worst place of a span at which it cracks without bars, under the first such loads.
 
-    ``x`` is the distance from the left axis [mm], ``factors`` those of the loads of the stage.
+    ``x`` is the distance from the left axis [mm].
     """
 
     span: int
     face: Face
     x: float
-    words: str
-    factors: Mapping[Row, float]
-
-    @property
-    def building(self) -> bool:
-        """Whether the stage is that of construction."""
-        return self.words == _CONSTRUCTION
+    loading: Loading
 
 
 def hinge_of(design: Design, span: int, services: Mapping[int, ServiceMoments]) -> Hinge | None:
@@ -83,36 +90,31 @@ def hinge_of(design: Design, span: int, services: Mapping[int, ServiceMoments]) 
     solution = model.forces.solution
     moments = solution.span(span).moment(x)
     limits = cracking_moments(model, span)
-    for words, factors in _stages(model, span, services):
-        M = np.array([factors.get(row, 0.0) for row in solution.rows]) @ moments
+    for loading in _loadings(model, span, services):
+        M = np.array([loading.factors.get(row, 0.0) for row in solution.rows]) @ moments
         for face, sign in zip(FACES, (1.0, -1.0), strict=True):
             acting = np.where(bare[face], sign * M, 0.0)
             if acting.max() > limits[face] * (1 + ROUND_OFF):
                 worst = np.flatnonzero(acting >= acting.max() * (1 - ROUND_OFF))[0]
-                return Hinge(span, face, float(x[worst]), words, factors)
+                return Hinge(span, face, float(x[worst]), loading)
     return None
 
 
-def _stages(
-    model: Model, span: int, services: Mapping[int, ServiceMoments]
-) -> Iterator[tuple[str, Mapping[Row, float]]]:
-    """Give name and load factors of every stage, that of construction first, then its own."""
+def _loadings(model: Model, span: int, services: Mapping[int, ServiceMoments]) -> Iterator[Loading]:
+    """Give the loads of every stage, of construction first, then the span's own, then others'."""
     service = services[span]
     if model.inputs.construction_load is not None:
         kind, w_cn = model.inputs.live_kind, model.sheet.entry(f"{LOADS}/w_cn").value
         spans = range(1, model.spans + 1)
-        yield (
-            _CONSTRUCTION,
-            {
-                **{("D", k): 1.0 for k in spans},
-                **{(kind, k): w_cn / model.uniform[kind, k].value for k in spans},
-            },
-        )
-    yield from ((WORDS[stage], factors) for stage, factors in service.factors.items())
+        dead = {("D", k): 1.0 for k in spans}
+        added = {(kind, k): w_cn / model.uniform[kind, k].value for k in spans}
+        yield Loading(BUILDING, dead | added, building=True)
+    for stage, factors in service.factors.items():
+        yield Loading(WORDS[stage], factors)
     for number, beside in services.items():
         for stage, factors in beside.factors.items():
             if number != span:
-                yield f"{WORDS[stage]}, live load as for span {number}", factors
+                yield Loading(f"{WORDS[stage]}, live load as for span {number}", factors)
 
 
 def _places(design: Design, span: int) -> tuple[Floats, Floats]:
@@ -169,8 +171,8 @@ def record_hinge(
             source=f"{hinge.face} bars: none count here; worst of all stations",
         )  # fmt: skip
         M_a = record_at(
-            steps, model, hinge.factors, hinge.words, span=hinge.span, x=x,
-            earlier=earlier if hinge.building else None,
+            steps, model, hinge.loading.factors, hinge.loading.words, span=hinge.span, x=x,
+            earlier=earlier,
         )  # fmt: skip
         args: dict[str, Any] = {"M_a": M_a, limit.symbol: limit}
         check = sheet.check(stages.WHOLE_TOP if top else stages.WHOLE, **args)
@@ -192,7 +194,7 @@ def stiffness_checks(sheet: Sheet, span: int) -> list[Entry]:
     """Return the check that a span fails for want of stiffness, if it does."""
     key = deflection_key(span)
     entries = next((part.entries for part in sheet.parts if part.key == key), {})
-    return [e for e in entries.values() if e.source in (stages.WHOLE, stages.WHOLE_TOP)]
+    return [e for e in entries.values() if e.source in stages.NO_STIFFNESS]
 
 
 def continuous_with(model: Model, hinges: Sequence[int]) -> dict[int, int]:

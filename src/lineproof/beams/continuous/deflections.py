@@ -95,7 +95,7 @@ def name_of(model: Model, span: int) -> str:
 
 
 def _record_hinge(design: Design, hinge: Hinge) -> RecordedDeflection:
-    earlier = _earlier(design.model, hinge.span) if hinge.building else {}
+    earlier = _earlier(design.model, hinge.span) if hinge.loading.building else {}
     return record_hinge(design, hinge, earlier, name_of(design.model, hinge.span))
 
 

@@ -22,6 +22,8 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3.deflection_stages import HOGGING_SIZE
 
 Factors = Mapping[Row, float]
+BUILDING = "dead and construction load"
+"""What the loads of the stage of construction are called."""
 
 
 def service_lines(
@@ -65,13 +67,8 @@ def record_construction(steps: Steps, model: Model, span: int) -> dict[str, Entr
             "construction_load: the moments of single live loads cannot be scaled to it; leave it "
             "out, or give the single live loads as dead load of a calculation of that stage"
         )
-    lines = _Lines(
-        steps, model, {("D", k): 1.0 for k in range(1, model.spans + 1)}, _BUILDING, span
-    )
+    lines = _Lines(steps, model, {("D", k): 1.0 for k in range(1, model.spans + 1)}, BUILDING, span)
     return lines.record_earlier()
-
-
-_BUILDING = "dead and construction load"
 
 
 def record_at(
@@ -237,7 +234,10 @@ class _Lines:
         return terms
 
     def _hanging(self, x: float, load: str) -> list[str]:
-        """Return what the loads beyond x_f, towards the free end of a cantilever, give there."""
+        """Return what the loads beyond x_f, towards the free end of a cantilever, give there.
+
+        There are some: without them no moment is there that could crack the section.
+        """
         right = self.model.inputs.supports[self.span].kind == "free"
         terms = [f"-{load}*{'(l - x_f)' if right else 'x_f'}**2/2"] if load else []
         for single in self._single():
@@ -255,7 +255,7 @@ class _Lines:
             elif (first >= x) == right:
                 arm = f"(({s} + {e})/2 - x_f)" if right else f"(x_f - ({s} + {e})/2)"
                 terms.append(f"-{factor}*w_x{n}*({e} - {s})*{arm}")
-        return terms or ["0*w_s*l**2"]
+        return terms
 
     def _any(self, end: End) -> bool:
         return any(moment_name(self.model, g, self.span, end) for g in self.by_group)
