@@ -7,9 +7,9 @@ closer stirrups along the span.
 from __future__ import annotations
 
 import math
-import re
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, replace
+from itertools import product
 
 from lineproof.beams.continuous import cures as find
 from lineproof.beams.continuous import cures_checks
@@ -24,16 +24,15 @@ from lineproof.beams.continuous.cutoff import (
     zone_at,
 )
 from lineproof.beams.continuous.cutoff_ends import SideOf, bottom_side, top_side
+from lineproof.beams.continuous.cutoff_record import cut_key, shear_key, side_key
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.detailing_bottom import SIDES
 from lineproof.beams.continuous.resistance_demand import stretch_at
 from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.beams.continuous.shear_stretches import stretches_of
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
-
-_PART = re.compile(r"anchorage-(bottom|top)-(\d+)-(left|right)-cut-(\d+)-shear")
 
 
 @dataclass(frozen=True, slots=True)
@@ -51,13 +50,25 @@ class Cut:
 
 def cut_of(design: Design, check: Entry) -> Cut | None:
     """Return the cut that a check of low shear stands for."""
-    match = _PART.fullmatch(check.part.key)
-    if match is None or check.source is not clause.CUT_AT_LOW_SHEAR:
+    if check.source is not clause.CUT_AT_LOW_SHEAR:
         return None
-    designed, runs, number = design.designed, design.runs, int(match[2])
-    end: End = "left" if match[3] == "left" else "right"
-    side = (bottom_side if match[1] == "bottom" else top_side)(designed, runs, number, end)
-    return Cut(side, int(match[4]) - 1)
+    found = (
+        Cut(side, index)
+        for key, side in _sides(design)
+        for index in range(len(side.cuts))
+        if shear_key(cut_key(key, index)) == check.part.key
+    )
+    return next(found, None)
+
+
+def _sides(design: Design) -> Iterator[tuple[str, SideOf]]:
+    """Give the bars of every section towards every end, with the key of their part."""
+    designed, runs = design.designed, design.runs
+    for number, end in product(range(1, len(designed.outline.supports) + 1), SIDES):
+        if number <= len(designed.outline.lengths) and not designed.cantilever(number):
+            yield side_key("bottom", number, end), bottom_side(designed, runs, number, end)
+        if designed.forces.has_span(number, end):
+            yield side_key("top", number, end), top_side(designed, runs, number, end)
 
 
 def cut_cures(design: Design, cut: Cut) -> list[Cure]:

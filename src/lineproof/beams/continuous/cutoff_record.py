@@ -25,8 +25,8 @@ from lineproof.beams.continuous.cutoff_sets import (
     record_resistance,
     text_of,
 )
-from lineproof.beams.continuous.forces import Demand
-from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.forces import Demand, End
+from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance_demand import stretch_at
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps, only
@@ -80,6 +80,21 @@ def thickest(runs: Runs) -> BarRun:
     return max(runs, key=lambda run: run.diameter)
 
 
+def side_key(face: Face, number: int, towards: End) -> str:
+    """Return the key of the part of bars towards one end: below a span, or above a support."""
+    return f"anchorage-{face}-{number}-{towards}"
+
+
+def cut_key(side: str, index: int) -> str:
+    """Return the key of the part of a cut, by that of its side and its place in the cuts."""
+    return f"{side}-cut-{index + 1}"
+
+
+def shear_key(cut: str) -> str:
+    """Return the key of the part with the shear at a cut."""
+    return f"{cut}-shear"
+
+
 def record_cuts(site: Site) -> None:
     """Record every cut-off of the bars of one side, a part each."""
     for index in range(len(site.side.cuts)):
@@ -95,7 +110,7 @@ def point_of(frame: Frame, side: SideOf, index: int) -> Point | None:
 def _record_cut(site: Site, index: int) -> None:
     side, sheet = site.side, site.writers.sheet
     ending, continuing = side.cuts[index], side.continuing(index)
-    key = f"{site.key}-cut-{index + 1}"
+    key = cut_key(site.key, index)
     point = point_of(site.frame, side, index)
     zone = zone_at(site.writers.designed, side.face, side.span, side.near, ending.t, continuing)
     going = f"{text_of(continuing)} going on" if continuing else "none going on"
@@ -203,7 +218,7 @@ def _rows_at(site: Site, t: float) -> tuple[int, int]:
 
 
 def _record_low_shear(site: Site, key: str, t: float) -> None:
-    with site.writers.sheet.part(f"{key}-shear", f"{site.title}: end in the tension zone"):
+    with site.writers.sheet.part(shear_key(key), f"{site.title}: end in the tension zone"):
         steps = _at_end(site, t, _rows_at(site, t)[1])
         if site.writers.designed.shear:
             steps.check(clause.CUT_AT_LOW_SHEAR)
@@ -231,7 +246,7 @@ def _at_end(site: Site, t: float, row: int) -> Steps:
 
 def _record_double_area(site: Site, key: str, t: float, continuing: Sequence[BarRun]) -> None:
     by_moment, by_shear = _rows_at(site, t)
-    with site.writers.sheet.part(f"{key}-shear", f"{site.title}: shear at the end"):
+    with site.writers.sheet.part(shear_key(key), f"{site.title}: shear at the end"):
         _at_end(site, t, by_shear).check(clause.CUT_AT_MODERATE_SHEAR)
     with site.writers.sheet.part(f"{key}-area", f"{site.title}: steel at the end"):
         steps = _at_end(site, t, by_moment)

@@ -13,7 +13,7 @@ from lineproof.beams.continuous.anchorage_record import (
 )
 from lineproof.beams.continuous.cutoff import Frame
 from lineproof.beams.continuous.cutoff_ends import Runs, at_support, bottom_side, top_side
-from lineproof.beams.continuous.cutoff_record import Site, record_cuts
+from lineproof.beams.continuous.cutoff_record import Site, record_cuts, side_key
 from lineproof.beams.continuous.cutoff_support import (
     Hooks,
     assumed_restraint,
@@ -74,7 +74,8 @@ def _record_bottom(
         return
     for near in SIDES:
         side = bottom_side(designed, runs, span, near)
-        site = Site(writers, frame, lengths, side, section, f"{key}-{near}", title)
+        own = side_key("bottom", span, near)
+        site = Site(writers, frame, lengths, side, section, own, title)
         there = replace(site, side=at_support(designed, runs, side))
         record_into_support(there)
         record_zero_moment(there, hooked)
@@ -89,7 +90,7 @@ def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, su
         if not designed.forces.has_span(support, towards):
             continue
         side = top_side(designed, runs, support, towards)
-        key = f"anchorage-top-{support}-{towards}"
+        key = side_key("top", support, towards)
         title = f"Top bars of support {support}, span {side.span}"
         with writers.sheet.part(key, title):
             layers = top_layers(designed, support)

@@ -24,10 +24,12 @@ from lineproof.beams.continuous.faces import (
     nominally_simple,
 )
 from lineproof.beams.continuous.flexure_gaps import (
+    no_resistance,
+    no_steel,
+    note_gap,
+    note_none,
     record_depth_assumed,
     record_depth_beside,
-    record_none,
-    record_without,
 )
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
@@ -42,6 +44,7 @@ from lineproof.beams.continuous.section_checks import (
 from lineproof.beams.continuous.skin import record_skin
 from lineproof.beams.cracks import cracks_inside
 from lineproof.beams.flexure import record_yield, required, resistance
+from lineproof.beams.inputs import Shape
 from lineproof.beams.minimum_steel import minimum_of
 from lineproof.beams.second_path import record_proof
 from lineproof.beams.section import zone_of
@@ -79,62 +82,71 @@ def record_sag(design: Design, span: int) -> None:
     bars have a resistance but nothing to resist.
     """
     model, layers = design.model, design.bottom_bars(span)
-    sheet, inputs = model.sheet, model.inputs
-    demand, key = model.forces.sag(span), f"sag-{span}"
-    if layers:
-        counts = _bottom_in_part(design, key, span)
-    else:
-        with sheet.part(f"{key}-beside", f"Span {span}: depth to the bottom bars beside the gap"):
-            sheet.stand_for(begin(model, span, "b_w").place)
-            holder = design.designed.bars.holders
-            counts = {
-                "d": record_depth_beside(sheet, inputs.stirrup, design.bottom_beside(span), holder)
-            }
-    with sheet.part(key, f"Span {span}: moment in the span"):
-        steps = begin(model, span, "b_f" if inputs.slab else "b_w")
+    inputs, key = model.inputs, f"sag-{span}"
+    counts = _bottom_in_part(design, key, span) if layers else _depth_beside(design, key, span)
+    with model.sheet.part(key, f"Span {span}: moment in the span"):
+        steps, demand = begin(model, span, "b_f" if inputs.slab else "b_w"), model.forces.sag(span)
         near = nearer(model, demand)
         record_forces(steps, model, demand, near, x=at_face(model, demand, near))
         sags = has_sag(model, span)
         if not sags:
-            sheet.note(NO_MOMENT, NO_SAG, title="Bottom bars", basis=MECHANICS)
-        steps.bind(**counts)
+            model.sheet.note(NO_MOMENT, NO_SAG, title="Bottom bars", basis=MECHANICS)
         if layers:
-            _record_span_bars(steps, design, span, counted=bool(counts), sags=sags)
+            origin = _origin(inputs, inputs.bottom_bars[span - 1])
+            bars_inside(model.sheet, layers, stirrup=inputs.stirrup, origin=origin)
+            _take(steps, _LAYERS)
         elif sags:
-            record_without(steps, inputs.shape, "bottom")
+            note_gap(model.sheet, "bottom")
         else:
-            record_none(steps, "bottom")
+            note_none(model.sheet, "bottom")
+        steps.bind(**counts)
+        M_r = _record_strength(steps, design, inputs.shape, bare=not layers, asked=sags)
+        if not layers:
+            return
+        case = "two layers" if len(layers) > 1 and not counts else "one layer"
+        record_proof(steps, (zone_of(inputs.shape), case), M_r)
+        if sags:
+            minimum_of(
+                steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
+            )
+            cracks_inside(steps, inputs.exposure, layers)
+        if steps.decide(NEEDS_SKIN):
+            side = design.side_bars(span, sag_at(design.designed, span))
+            record_skin(steps, inputs.exposure, side)
 
 
-def _record_span_bars(
-    steps: Steps, design: Design, span: int, *, counted: bool, sags: bool
-) -> None:
-    """Record inside the open part bars, resistance and, where the span ``sags``, all checks.
+def _record_strength(
+    steps: Steps, design: Design, shape: Shape, *, bare: bool, asked: bool = True
+) -> Entry:
+    """Record steel and resistance; both are none of a ``bare`` section. Return the resistance.
 
-    ``counted`` says that the bars count otherwise than in full: their d and A_s are bound.
+    Each stands against what the moment asks for, unless it is not ``asked``: no load case brings
+    tension to that face.
     """
-    inputs, layers, own = design.model.inputs, design.bottom_bars(span), dict(steps.place)
-    origin = _origin(inputs, inputs.bottom_bars[span - 1])
-    bars_inside(steps.sheet, layers, stirrup=inputs.stirrup, origin=origin)
-    _take(steps, _LAYERS)
-    if counted:
-        steps.bind(d=own["d"], A_s=own["A_s"])
-    if sags:
-        required(steps, inputs.shape)
+    if asked:
+        required(steps, shape)
+    if bare:
+        steps.bind(A_s=no_steel(steps.sheet))
+    if asked:
         steps.check(flexure.ENOUGH_STEEL)
-    M_r = resistance(steps, inputs.shape)
-    record_yield(steps, design.pair)
-    if sags:
+    if bare:
+        M_r = no_resistance(steps.sheet)
+        steps.bind(M_r=M_r)
+    else:
+        M_r = resistance(steps, shape)
+        record_yield(steps, design.pair)
+    if asked:
         steps.check(flexure.STRENGTH)
-    case = "two layers" if len(layers) > 1 and not counted else "one layer"
-    record_proof(steps, (zone_of(inputs.shape), case), M_r)
-    if sags:
-        minimum_of(
-            steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
-        )
-        cracks_inside(steps, inputs.exposure, layers)
-    if steps.decide(NEEDS_SKIN):
-        record_skin(steps, inputs.exposure, design.side_bars(span, sag_at(design.designed, span)))
+    return M_r
+
+
+def _depth_beside(design: Design, key: str, span: int) -> dict[str, Entry]:
+    """Record the depth to the bottom bars beside a gap; return it."""
+    sheet, stirrup = design.model.sheet, design.model.inputs.stirrup
+    with sheet.part(f"{key}-beside", f"Span {span}: depth to the bottom bars beside the gap"):
+        sheet.stand_for(begin(design.model, span, "b_w").place)
+        beside, holder = design.bottom_beside(span), design.designed.bars.holders
+        return {"d": record_depth_beside(sheet, stirrup, beside, holder)}
 
 
 def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
@@ -273,7 +285,8 @@ def _record_face_without(design: Design, face: Face) -> None:
     record_demand(steps, design.model, face)
     steps.place.pop("h_f", None)
     record_depth_assumed(steps, design.model.inputs.stirrup, design.designed.bars.holders)
-    record_without(steps, "rectangular", "top")
+    note_gap(steps.sheet, "top")
+    _record_strength(steps, design, "rectangular", bare=True)
 
 
 def _record_face(
@@ -290,11 +303,7 @@ def _record_face(
     steps.place.pop("h_f", None)
     _record_top_bars(steps, model, face, top)
     steps.bind(**counts)
-    required(steps, "rectangular")
-    steps.check(flexure.ENOUGH_STEEL)
-    M_r = resistance(steps, "rectangular")
-    record_yield(steps, design.pair)
-    steps.check(flexure.STRENGTH)
+    M_r = _record_strength(steps, design, "rectangular", bare=False)
     _record_redistribution(steps, model, face)
     record_proof(steps, ("rectangle", "one layer"), M_r)
     minimum_of(

@@ -9,12 +9,10 @@ from __future__ import annotations
 from lineproof.beams.bars import BarLayer, BarLayers
 from lineproof.beams.bottom_bars import bars_inside
 from lineproof.beams.continuous.layout import Face
-from lineproof.beams.flexure import required
-from lineproof.beams.inputs import Shape
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars, flexure
+from lineproof.standards.a23_3 import bars
 from lineproof.standards.references import MECHANICS
 
 NO_BARS = (
@@ -46,20 +44,22 @@ def record_depth_assumed(steps: Steps, stirrup: str, holder: str) -> None:
     steps.line(bars.DEPTH_ONE_LAYER)
 
 
-def record_none(steps: Steps, face: Face) -> None:
-    """Record that no bars stand where none are needed: no load case brings tension to the face."""
-    sheet = steps.sheet
+def note_none(sheet: Sheet, face: Face) -> None:
+    """Record inside the open part that no bars of a face stand here."""
     sheet.note("bars-text", f"{face.capitalize()} bars: none.", title="Bars")
-    steps.bind(A_s=sheet.given("A_s", "0 mm2", source="no bars stand here"))
 
 
-def record_without(steps: Steps, shape: Shape, face: Face) -> None:
-    """Record the steel required against none, and the moment against no resistance."""
-    sheet = steps.sheet
-    sheet.note("bars-text", f"{face.capitalize()} bars: none.", title="Bars")
+def note_gap(sheet: Sheet, face: Face) -> None:
+    """Record inside the open part that no bars of a face stand where they are needed."""
+    note_none(sheet, face)
     sheet.note("no-bars", NO_BARS.format(face=face), title="Gap", basis=MECHANICS)
-    required(steps, shape)
-    steps.bind(A_s=sheet.given("A_s", "0 mm2", source="no bars stand here"))
-    steps.check(flexure.ENOUGH_STEEL)
-    steps.bind(M_r=sheet.given("M_r", "0 kN.m", source="no bars stand here"))
-    steps.check(flexure.STRENGTH)
+
+
+def no_steel(sheet: Sheet) -> Entry:
+    """Record that the area of the bars is none; return it."""
+    return sheet.given("A_s", "0 mm2", source="no bars stand here")
+
+
+def no_resistance(sheet: Sheet) -> Entry:
+    """Record that the moment resistance is none; return it."""
+    return sheet.given("M_r", "0 kN.m", source="no bars stand here")
