@@ -19,7 +19,7 @@ from lineproof.notebook.cells import cells_of, joined, load_notebook
 from lineproof.notebook.read import stale_cells
 from lineproof.record import Record
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import flexure, shear, stress_block
+from lineproof.standards.a23_3 import flexure, shear, shear_factors, stress_block
 
 
 def flexure_and_shear(sheet: Sheet) -> None:
@@ -32,8 +32,8 @@ def flexure_and_shear(sheet: Sheet) -> None:
     sheet.line(flexure.BLOCK_RECTANGULAR, b=sheet.entry("inputs/b_w"))
     sheet.line(flexure.M_R_RECTANGULAR)
     sheet.line(shear.D_V)
-    sheet.lookup("beta", shear.SIMPLIFIED, "minimum stirrups or more")
-    sheet.lookup("theta", shear.SIMPLIFIED, "minimum stirrups or more")
+    sheet.lookup("beta", shear_factors.SIMPLIFIED, "minimum stirrups or more")
+    sheet.lookup("theta", shear_factors.SIMPLIFIED, "minimum stirrups or more")
     sheet.line(shear.V_C)
 
 

@@ -21,6 +21,7 @@ from lineproof.standards.a23_3 import (
     materials,
     shear,
     shear_bars,
+    shear_factors,
     torsion,
 )
 from lineproof.standards.nbc import reduction
@@ -90,25 +91,25 @@ def test_no_8_simplified_shear() -> None:
 
 def test_no_8b_without_stirrups() -> None:
     """beta 0.1552, V_c 100.6 kN; aggregate 14 mm: s_ze 581.1 mm, beta 0.1455."""
-    x = chain(BASE | {"a_max": 14}, shear.D_V, shear.BETA_D_V, shear.V_C)
+    x = chain(BASE | {"a_max": 14}, shear.D_V, shear_factors.BETA_D_V, shear.V_C)
     assert x["beta"] == pytest.approx(0.1552, abs=5e-5)
     assert x["V_c"] / 1e3 == pytest.approx(100.6, abs=0.05)
-    chain(x, shear.A_G, shear.S_Z, shear.S_ZE, shear.BETA_S_ZE)
+    chain(x, shear_factors.A_G, shear_factors.S_Z, shear_factors.S_ZE, shear_factors.BETA_S_ZE)
     assert x["s_ze"] == pytest.approx(581.1, abs=0.05)
     assert x["beta"] == pytest.approx(0.1455, abs=5e-5)
 
 
 def test_no_9_general_shear() -> None:
     """V_f 260, M_f 160: eps_x 0.740e-3, beta 0.1895, theta 34.18, V_c 122.8, V_s 214.3 kN."""
-    x = chain(BASE | {"V_f": 260e3, "M_f": 160e6}, shear.D_V, shear.EPS_X)
+    x = chain(BASE | {"V_f": 260e3, "M_f": 160e6}, shear.D_V, shear_factors.EPS_X)
     assert x["eps_x"] == pytest.approx(0.740e-3, abs=5e-7)
-    chain(x, shear.BETA_STIRRUPS, shear.THETA, shear.V_C, shear.V_S)
+    chain(x, shear_factors.BETA_STIRRUPS, shear_factors.THETA, shear.V_C, shear.V_S)
     assert x["beta"] == pytest.approx(0.1895, abs=5e-5)
     assert x["theta"] == pytest.approx(34.18, abs=0.005)
     assert x["V_c"] / 1e3 == pytest.approx(122.8, abs=0.05)
     assert x["V_s"] / 1e3 == pytest.approx(214.3, abs=0.05)
     x["s_ze"] = 300.0
-    assert value(shear.BETA_GENERAL, x) == pytest.approx(x["beta"], rel=1e-12)
+    assert value(shear_factors.BETA_GENERAL, x) == pytest.approx(x["beta"], rel=1e-12)
 
 
 def test_no_9b_longitudinal_bars() -> None:

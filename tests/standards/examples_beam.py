@@ -25,21 +25,21 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     # check no. 8: 0.125*0.65*35*350*481.5 = 479.2 kN
     "shear.CLOSER": ({**C, "V_f": 479.3}, {**C, "V_f": 479.2}),
     "shear.SPACING": ({"s": 168, "s_max": 168.5}, {"s": 225, "s_max": 168.5}),
-    "shear.GRADE_FOR_SIMPLIFIED": ({"f_y": 400}, {"f_y": 500}),
-    "shear.CONCRETE_FOR_SIMPLIFIED": ({"f_c": 60}, {"f_c": 65}),
-    "shear.SHALLOW": ({"h": 250}, {"h": 251}),
+    "shear_factors.GRADE_FOR_SIMPLIFIED": ({"f_y": 400}, {"f_y": 500}),
+    "shear_factors.CONCRETE_FOR_SIMPLIFIED": ({"f_c": 60}, {"f_c": 65}),
+    "shear_factors.SHALLOW": ({"h": 250}, {"h": 251}),
     # half the web of 350: 175; half the web of 900 counts as 350
-    "shear.SHALLOW_BELOW_SLAB": (
+    "shear_factors.SHALLOW_BELOW_SLAB": (
         {"h": 300, "h_f": 130, "b_w": 350},
         {"h": 500, "h_f": 140, "b_w": 900},
     ),
     # 0.003*350*200 = 210 mm2
-    "shear.LAYER_COUNTS": (
+    "shear_factors.LAYER_COUNTS": (
         {"b_w": 350, "s_z": 200, "A_ly": 210},
         {"b_w": 350, "s_z": 200, "A_ly": 200},
     ),
-    "shear.STRAIN_IN_RANGE": ({"eps_x": 0.003}, {"eps_x": 0.0031}),
-    "shear.BARS_IN_RANGE": ({"A_sx": 493.6, "A_s": 500}, {"A_sx": 493.6, "A_s": 0}),
+    "shear_factors.STRAIN_IN_RANGE": ({"eps_x": 0.003}, {"eps_x": 0.0031}),
+    "shear_factors.BARS_IN_RANGE": ({"A_sx": 493.6, "A_s": 500}, {"A_sx": 493.6, "A_s": 0}),
     "shear.DEPTH_WITHOUT_STIRRUPS": ({"h": 750}, {"h": 751}),
     "shear.CLEAR_SPACE": ({"s": 100, "d_bs": 11.3}, {"s": 75, "d_bs": 11.3}),
     "shear_bars.HOOKS_SUFFICE": ({"d_bs": 16}, {"d_bs": 19.5}),

@@ -12,7 +12,7 @@ from lineproof.standards.a23_3 import (
     development,
     hooks,
     interface,
-    shear,
+    shear_factors,
 )
 from lineproof.standards.codes import code_pair
 from lineproof.standards.nbc import loads, reduction
@@ -32,16 +32,19 @@ def test_coefficients() -> None:
 
 def test_shear_values() -> None:
     """A23.3-04, 11.3.6: 0.18 and 35 degrees; special members 0.21 and 42 degrees (from memory)."""
-    assert shear.SIMPLIFIED.rows["minimum stirrups or more"] == {"beta": "0.18", "theta": "35"}
-    assert shear.SIMPLIFIED.rows["below minimum stirrups"] == {"theta": "35"}
-    assert shear.SPECIAL.rows["shallow beam"] == {"beta": "0.21", "theta": "42"}
+    assert shear_factors.SIMPLIFIED.rows["minimum stirrups or more"] == {
+        "beta": "0.18",
+        "theta": "35",
+    }
+    assert shear_factors.SIMPLIFIED.rows["below minimum stirrups"] == {"theta": "35"}
+    assert shear_factors.SPECIAL.rows["shallow beam"] == {"beta": "0.21", "theta": "42"}
 
 
 def test_simplified_factor_follows_from_the_general_method() -> None:
     """Strain 0.85e-3: 0.40/2.275 = 0.1758 (read 0.18), x 1300 = 228.6 (230), 34.95 (35) degrees."""
-    assert shear.BETA_STIRRUPS.function(0.85e-3) == pytest.approx(0.1758, abs=5e-5)
-    assert shear.BETA_STIRRUPS.function(0.85e-3) * 1300 == pytest.approx(228.6, abs=0.05)
-    assert shear.THETA.function(0.85e-3) == pytest.approx(34.95)
+    assert shear_factors.BETA_STIRRUPS.function(0.85e-3) == pytest.approx(0.1758, abs=5e-5)
+    assert shear_factors.BETA_STIRRUPS.function(0.85e-3) * 1300 == pytest.approx(228.6, abs=0.05)
+    assert shear_factors.THETA.function(0.85e-3) == pytest.approx(34.95)
 
 
 def test_interface_tables() -> None:

@@ -28,6 +28,7 @@ from lineproof.standards.a23_3 import (
     minimum,
     shear,
     shear_bars,
+    shear_factors,
     strain,
     strain_closing,
     stress_block,
@@ -45,8 +46,8 @@ NOTATION: Notation = A23_3 | NBC
 _MODULES = (
     materials, stress_block, flange, flexure, compression_steel, minimum, crack_control,
     capacity, bars, cover, strain, strain_closing, loads, combinations, reduction, analysis,
-    shear, shear_bars, torsion, interface, bearing, deflection, deflection_stages,
-    development, hooks, laps, cutoff,
+    shear, shear_factors, shear_bars, torsion, interface, bearing, deflection,
+    deflection_stages, development, hooks, laps, cutoff,
 )  # fmt: skip
 
 

@@ -12,13 +12,13 @@ from lineproof.audit.search.member import Member
 from lineproof.formula import Criterion
 from lineproof.record import Record
 from lineproof.record.entry import CHECK, DECISION
-from lineproof.standards.a23_3 import deflection_stages, shear
+from lineproof.standards.a23_3 import deflection_stages, shear, shear_factors
 
 _NUMBERED = re.compile(r"-\d+$")
 _STOPS = {
     test.key
     for test in (
-        shear.STRAIN_IN_RANGE, shear.BARS_IN_RANGE, *deflection_stages.NO_STIFFNESS,
+        shear_factors.STRAIN_IN_RANGE, shear_factors.BARS_IN_RANGE, *deflection_stages.NO_STIFFNESS,
     )
 }  # fmt: skip
 _NO_MOMENT = "no-moment"

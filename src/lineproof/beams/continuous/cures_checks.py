@@ -27,6 +27,7 @@ from lineproof.standards.a23_3 import (
     flexure,
     materials,
     shear,
+    shear_factors,
     stress_block,
 )
 
@@ -114,8 +115,8 @@ def shear_strength(given: Mapping[str, float]) -> Utilisation:
     def utilisation(changes: Mapping[str, float]) -> float:
         values = follow(changed(given, changes), shear.D_V)
         if "M_f" in values:
-            follow(values, shear.EPS_X, shear.BETA_STIRRUPS, shear.THETA)
-            if not shear.STRAIN_IN_RANGE.holds(values["eps_x"], 0.003):
+            follow(values, shear_factors.EPS_X, shear_factors.BETA_STIRRUPS, shear_factors.THETA)
+            if not shear_factors.STRAIN_IN_RANGE.holds(values["eps_x"], 0.003):
                 return math.inf
         follow(values, shear.V_C, shear.V_S, shear.V_R_MAX, shear.V_R)
         return used(shear.STRENGTH, values)

@@ -37,7 +37,7 @@ from lineproof.record import Entry, Part
 from lineproof.record.printing import utilisation
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
-from lineproof.standards.a23_3 import shear
+from lineproof.standards.a23_3 import shear, shear_factors
 
 NOT_SOUGHT = (
     "Depth, steel, width and concrete strength are not what this check is about: no cure is sought "
@@ -173,7 +173,7 @@ def _stirrup_cures(model: Model, check: Entry) -> list[Cure]:
     if model.inputs.shear_method == "simplified":
         del values["M_f"]
         row = "minimum stirrups or more"
-        values |= {name: shear.SIMPLIFIED.number(row, name) for name in ("beta", "theta")}
+        values |= {name: shear_factors.SIMPLIFIED.number(row, name) for name in ("beta", "theta")}
     uses = [
         rule(values)
         for rule in (

@@ -17,6 +17,7 @@ from lineproof.standards.a23_3 import (
     minimum,
     shear,
     shear_bars,
+    shear_factors,
     torsion,
 )
 
@@ -35,7 +36,7 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
     crack_control.CRACKS: ("number", "bars"),
     shear.STRENGTH: ("s", *_SECTION),
     shear.WEB_HOLDS: _WEB,
-    shear.STRAIN_IN_RANGE: ("A_s", "h"),
+    shear_factors.STRAIN_IN_RANGE: ("A_s", "h"),
     shear.SPACING: ("s", "h"),
     shear.HAS_MINIMUM: ("s",),
     shear_bars.TENSION_SIDE_HOLDS: ("A_sd", "s", "h"),
@@ -65,5 +66,5 @@ MORE_AREA: Mapping[Criterion, str] = {
     cutoff.INTO_CONTINUOUS_SUPPORT: "{:g} mm² more of bottom bars going into the support",
     cutoff.TOP_PAST_INFLECTION: "{:g} mm² more of top bars going past the inflection",
     cutoff.CUT_AT_DOUBLE_AREA: "{:g} mm² more of bars going on",
-    shear.BARS_IN_RANGE: "{:g} mm² more of bars developed on the face in tension",
+    shear_factors.BARS_IN_RANGE: "{:g} mm² more of bars developed on the face in tension",
 }

@@ -15,7 +15,7 @@ import numpy as np
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.torsion import SpanTorsion
 from lineproof.errors import FaultList
-from lineproof.standards.a23_3 import shear
+from lineproof.standards.a23_3 import shear_factors
 from lineproof.standards.a23_3.bars import BARS
 
 Method = Literal["general", "simplified"]
@@ -152,12 +152,12 @@ def check_basis(basis: ShearBasis) -> None:
     if basis.method not in METHODS:
         faults.add(f"shear_method: {basis.method!r}; write one of {', '.join(METHODS)}")
     if basis.method == "simplified":
-        if not shear.GRADE_FOR_SIMPLIFIED.holds(basis.f_y, 400.0):
+        if not shear_factors.GRADE_FOR_SIMPLIFIED.holds(basis.f_y, 400.0):
             faults.add(
                 f"shear_method: 'simplified' holds up to bars of 400 MPa, but f_y is "
                 f"{basis.f_y:g} MPa; write 'general'"
             )
-        if not shear.CONCRETE_FOR_SIMPLIFIED.holds(basis.f_c, 60.0):
+        if not shear_factors.CONCRETE_FOR_SIMPLIFIED.holds(basis.f_c, 60.0):
             faults.add(
                 f"shear_method: 'simplified' holds up to concrete of 60 MPa, but f_c is "
                 f"{basis.f_c:g} MPa; write 'general'"

@@ -9,7 +9,7 @@ from lineproof.beams.continuous.torsion_record import record_torsion, record_tor
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
-from lineproof.standards.a23_3 import shear, torsion
+from lineproof.standards.a23_3 import shear, shear_factors, torsion
 from lineproof.standards.references import SHEAR_2004
 
 COARSE = 20.0
@@ -119,33 +119,33 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
 def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> bool:
     """Record factor and angle by the chosen method; tell whether the section is in its range."""
     if section.plain:
-        steps.line(shear.A_G)
-        steps.line(shear.S_Z)
+        steps.line(shear_factors.A_G)
+        steps.line(shear_factors.S_Z)
     bare = section.A_s == 0
     if section.counts and (bare or basis.method == "general"):
         steps.line(torsion.SHEAR_IN_STRAIN)
     if bare:  # the strain of no bars at all is no number, and neither method means a section so
-        steps.line(torsion.LEAST_BARS if section.counts else shear.LEAST_BARS)
-        steps.check(shear.BARS_IN_RANGE)
+        steps.line(torsion.LEAST_BARS if section.counts else shear_factors.LEAST_BARS)
+        steps.check(shear_factors.BARS_IN_RANGE)
         return False
     if basis.method == "general":
-        steps.line(torsion.EPS_X if section.counts else shear.EPS_X)
-        if not steps.check(shear.STRAIN_IN_RANGE):
+        steps.line(torsion.EPS_X if section.counts else shear_factors.EPS_X)
+        if not steps.check(shear_factors.STRAIN_IN_RANGE):
             return False
         if section.plain:
-            steps.line(shear.S_ZE)
-        steps.line(shear.BETA_GENERAL if section.plain else shear.BETA_STIRRUPS)
-        steps.line(shear.THETA)
+            steps.line(shear_factors.S_ZE)
+        steps.line(shear_factors.BETA_GENERAL if section.plain else shear_factors.BETA_STIRRUPS)
+        steps.line(shear_factors.THETA)
         return True
     row = "below minimum stirrups" if section.plain else "minimum stirrups or more"
-    steps.bind(theta=steps.sheet.lookup("theta", shear.SIMPLIFIED, row))
+    steps.bind(theta=steps.sheet.lookup("theta", shear_factors.SIMPLIFIED, row))
     if not section.plain:
-        steps.bind(beta=steps.sheet.lookup("beta", shear.SIMPLIFIED, row))
+        steps.bind(beta=steps.sheet.lookup("beta", shear_factors.SIMPLIFIED, row))
     elif steps.entry("a_g").value >= COARSE:
-        steps.line(shear.BETA_D_V)
+        steps.line(shear_factors.BETA_D_V)
     else:
-        steps.line(shear.S_ZE)
-        steps.line(shear.BETA_S_ZE)
+        steps.line(shear_factors.S_ZE)
+        steps.line(shear_factors.BETA_S_ZE)
     return True
 
 
@@ -200,12 +200,12 @@ def _record_other(steps: Steps, basis: ShearBasis) -> None:
     """Record for information what the other method gives, with symbols of its own."""
     if basis.method == "simplified":
         names = {"eps_x": "eps_xg", "beta": "beta_g", "theta": "theta_g"}
-        made = {"eps_x": steps.line(shear.EPS_X, symbol=names["eps_x"])}
+        made = {"eps_x": steps.line(shear_factors.EPS_X, symbol=names["eps_x"])}
         if made["eps_x"].value > 0.003:  # noqa: PLR2004 - 11.3.6.4
             _note_other(steps, "The general method does not apply: its strain is out of range.")
             return
-        made["beta"] = steps.line(shear.BETA_STIRRUPS, symbol=names["beta"], **made)
-        made["theta"] = steps.line(shear.THETA, symbol=names["theta"], **made)
+        made["beta"] = steps.line(shear_factors.BETA_STIRRUPS, symbol=names["beta"], **made)
+        made["theta"] = steps.line(shear_factors.THETA, symbol=names["theta"], **made)
     elif basis.f_y > 400 or basis.f_c > 60:  # noqa: PLR2004 - 11.3.6.3
         _note_other(
             steps,
@@ -217,7 +217,11 @@ def _record_other(steps: Steps, basis: ShearBasis) -> None:
         row = "minimum stirrups or more"
         made = {
             name: steps.sheet.lookup(
-                f"{name}_g", shear.SIMPLIFIED, row, name, title=f"{what} by the simplified method"
+                f"{name}_g",
+                shear_factors.SIMPLIFIED,
+                row,
+                name,
+                title=f"{what} by the simplified method",
             )
             for name, what in (("beta", "factor"), ("theta", "angle"))
         }

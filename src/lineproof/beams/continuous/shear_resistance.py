@@ -9,7 +9,7 @@ import numpy as np
 from lineproof.beams.continuous.shear_arrays import holds, sides, value
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanNumbers
 from lineproof.beams.continuous.torsion import designed_for
-from lineproof.standards.a23_3 import shear, torsion
+from lineproof.standards.a23_3 import shear, shear_factors, torsion
 
 MOST_STRAIN = 0.003
 """Range of the longitudinal strain of the general method."""
@@ -57,23 +57,23 @@ def _strain(basis: ShearBasis, v: dict[str, Any]) -> None:
     The strain asked is kept beyond its range where no bars count in tension, by either method:
     there is no resistance.
     """
-    v["a_g"] = value(shear.A_G, v)
-    v["s_ze"] = value(shear.S_ZE, v | {"s_z": v["d_v"]})
+    v["a_g"] = value(shear_factors.A_G, v)
+    v["s_ze"] = value(shear_factors.S_ZE, v | {"s_z": v["d_v"]})
     bare = v["A_s"] <= 0
     v["A_s"] = np.maximum(v["A_s"], LEAST_AREA)
-    asked = value(shear.EPS_X, v)
+    asked = value(shear_factors.EPS_X, v)
     if v["counts"].any():
         v["V_fe"] = value(torsion.SHEAR_IN_STRAIN, v)
         asked = np.where(v["counts"], value(torsion.EPS_X, v), asked)
     if basis.method == "simplified":
         v["eps_asked"] = np.where(bare, asked, 0.0)
-        row = shear.SIMPLIFIED.rows["minimum stirrups or more"]
+        row = shear_factors.SIMPLIFIED.rows["minimum stirrups or more"]
         v["beta"] = np.full_like(v["M"], float(row["beta"]))
         v["theta"] = np.full_like(v["M"], float(row["theta"]))
         coarse = v["a_g"] >= COARSE
-        v["beta_plain"] = value(shear.BETA_D_V if coarse else shear.BETA_S_ZE, v)
+        v["beta_plain"] = value(shear_factors.BETA_D_V if coarse else shear_factors.BETA_S_ZE, v)
         return
     v["eps_asked"] = asked
     v["eps_x"] = np.minimum(asked, MOST_STRAIN)
-    v["beta"], v["theta"] = value(shear.BETA_STIRRUPS, v), value(shear.THETA, v)
-    v["beta_plain"] = value(shear.BETA_GENERAL, v)
+    v["beta"], v["theta"] = value(shear_factors.BETA_STIRRUPS, v), value(shear_factors.THETA, v)
+    v["beta_plain"] = value(shear_factors.BETA_GENERAL, v)

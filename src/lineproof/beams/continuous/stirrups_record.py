@@ -9,7 +9,7 @@ from lineproof.beams.continuous.stirrups_choice import Choice
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY
 from lineproof.record import Entry
-from lineproof.standards.a23_3 import bars, shear, shear_bars
+from lineproof.standards.a23_3 import bars, shear, shear_bars, shear_factors
 
 _FIRST = (
     "The first stirrup stands about half a spacing from the face of the support, at most 75 mm. "
@@ -54,8 +54,8 @@ def record_stirrups(steps: Steps, choice: Choice, outline: BeamOutline) -> dict[
         title="Anchorage of the stirrups", clause="12.13", basis=FROM_MEMORY,
     )  # fmt: skip
     if basis.method == "simplified":
-        steps.check(shear.GRADE_FOR_SIMPLIFIED)
-        steps.check(shear.CONCRETE_FOR_SIMPLIFIED)
+        steps.check(shear_factors.GRADE_FOR_SIMPLIFIED)
+        steps.check(shear_factors.CONCRETE_FOR_SIMPLIFIED)
     steps.line(shear.SPACING_MINIMUM)
     spacings = [zone.spacing for zone in choice.zones]
     if spacings:

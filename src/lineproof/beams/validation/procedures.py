@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING
 from lineproof.beams.validation.notation import notation_for
 from lineproof.formula import Formula, criterion
 from lineproof.record import Procedure, procedure
-from lineproof.standards.a23_3 import shear, strain
+from lineproof.standards.a23_3 import shear, shear_factors, strain
 from lineproof.standards.references import MECHANICS
 
 if TYPE_CHECKING:
@@ -74,7 +74,7 @@ def _balanced(resistance: Callable[[float], float]) -> float:
 def _strained(values: Mapping[str, float], V_f: float) -> dict[str, float]:
     """Add the strain that a shear causes at d_v from the load."""
     x = {**values, "V_f": V_f, "M_f": V_f * (values["l_v"] - values["d_v"])}
-    x["eps_x"] = _value(shear.EPS_X, x)
+    x["eps_x"] = _value(shear_factors.EPS_X, x)
     return x
 
 
@@ -88,7 +88,13 @@ def _strength_with_stirrups(*args: float) -> float:
 
     def resistance(V_f: float) -> float:
         x = _strained(values, V_f)
-        for made in (shear.BETA_STIRRUPS, shear.THETA, shear.V_C, shear.V_S, shear.V_R):
+        for made in (
+            shear_factors.BETA_STIRRUPS,
+            shear_factors.THETA,
+            shear.V_C,
+            shear.V_S,
+            shear.V_R,
+        ):
             x[made.symbol] = _value(made, x)
         return x["V_r"]
 
@@ -104,7 +110,7 @@ def _strength_without(*args: float) -> float:
 
     def resistance(V_f: float) -> float:
         x = _strained(values, V_f)
-        for made in (shear.BETA_GENERAL, shear.V_C):
+        for made in (shear_factors.BETA_GENERAL, shear.V_C):
             x[made.symbol] = _value(made, x)
         return x["V_c"]
 

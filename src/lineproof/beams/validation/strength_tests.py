@@ -14,6 +14,7 @@ from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import (
     compression_steel,
     shear,
+    shear_factors,
     strain,
     strain_closing,
     stress_block,
@@ -102,18 +103,18 @@ def _general_method(steps: CaseSteps) -> None:
         steps.line(shear.A_V_MIN, f_y=steps.place["f_yt"])
         stirrups = bool(steps.decide(shear.HAS_MINIMUM))
     else:
-        steps.lines(shear.A_G, shear.S_Z, shear.S_ZE)
+        steps.lines(shear_factors.A_G, shear_factors.S_Z, shear_factors.S_ZE)
     steps.find("V_n", found.STRENGTH[stirrups], found.BELOW_CRUSHING, clause="11.3.6.4")
     steps.bind(V_f=steps.place["V_n"])
     steps.own("M_f = V_n*(l_v - d_v)", "Moment of the same load at the section checked")
-    steps.line(shear.EPS_X)
-    steps.decide(shear.STRAIN_IN_RANGE)
+    steps.line(shear_factors.EPS_X)
+    steps.decide(shear_factors.STRAIN_IN_RANGE)
     if stirrups:
-        steps.lines(shear.BETA_STIRRUPS, shear.THETA, shear.V_C)
+        steps.lines(shear_factors.BETA_STIRRUPS, shear_factors.THETA, shear.V_C)
         steps.line(shear.V_S, f_y=steps.place["f_yt"])
         steps.line(shear.V_R)
     else:
-        steps.lines(shear.BETA_GENERAL, shear.V_C, shear.V_R_PLAIN)
+        steps.lines(shear_factors.BETA_GENERAL, shear.V_C, shear.V_R_PLAIN)
     steps.check(found.STRENGTH_CLOSES)
     steps.bind(f_y=f_y)
 
