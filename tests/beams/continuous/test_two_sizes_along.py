@@ -7,6 +7,7 @@ The beam is that of ``test_two_sizes``: h 600, b_w 350, cover 30 to stirrups 10M
 
 from __future__ import annotations
 
+import math
 from typing import Any
 
 import pytest
@@ -66,6 +67,23 @@ def test_development_goes_by_all_bars_of_the_layer(laps: Sheet) -> None:
     assert made["K_tr"].value == pytest.approx(80_000 / (10.5 * 325 * 4))
     assert made["l_d0g"].value == pytest.approx(832.1, abs=0.1)
     assert entries_titled(laps, "Development of bottom bars 20M, 4 in a layer")["n_b"].value == 4
+
+
+def test_development_in_an_overhang_goes_by_all_bars_in_it() -> None:
+    """1-25M and 4-25M in each overhang of 7200/20 = 360 mm: 360/5 - 25.2 = 46.8 mm clear.
+
+    That is less than 2*25.2 = 50.4: 0.60*400/5*25.2 = 1209.6 mm, for the one bar too; alone, with
+    360 - 25.2 mm, it would have 0.45 in place of 0.60. 130 mm of concrete make no top bars.
+    """
+    spread = [
+        row("top", "2-25M", 5.2, 9.2, place="overhang"),
+        row("top", "8-25M", 5.4, 9.0, place="overhang"),
+    ]
+    sheet = beam([B_25, B_20, *TOP, *spread], ANCHORED)
+    made = entries_titled(sheet, "Development of top bars 25M, in the overhang")
+    assert made["n_o"].value == 5
+    assert made["s_c"].value == pytest.approx(360 / 5 - 25.2)
+    assert made["l_d"].value == pytest.approx(1209.6)
 
 
 def test_the_room_at_a_lap_of_thin_bars_is_that_beside_thick_ones(laps: Sheet) -> None:
@@ -240,6 +258,24 @@ def test_the_corner_bars_are_those_along_the_span(top: list[Row], d_bc: float) -
     bottom = [row("bottom", "2-25M", *EDGE_ENDS), row("bottom", "1-10M", *EDGE_ENDS)]
     calls = CALLS[: CALLS.index("shear") + 1]
     assert edge([*bottom, *top, *OVERHANG], calls).entries_of("torsion-1")["d_bc"].value == d_bc
+
+
+def test_straight_top_bars_at_an_end_are_as_long_as_those_that_end_first() -> None:
+    """In a column of 450 mm 2-20M end 150 mm past its axis and 2-20M 100 mm: 225 mm is the end.
+
+    225 - 100 = 125 mm of concrete are outside these: 450 - 125 = 325 mm from the face. At the other
+    column all end 150 mm past the axis: 450 - 75 = 375. Top bars at 32 MPa, with stirrups:
+    1.3*0.45*0.8*400/sqrt(32)*19.5 = 645.3 mm.
+    """
+    bottom = [row("bottom", "2-25M", *EDGE_ENDS), row("bottom", "1-20M", *EDGE_ENDS)]
+    top = [row("top", "2-20M", *EDGE_ENDS), row("top", "2-20M", -0.1, 15.35)]
+    sheet = edge([*bottom, *top, *OVERHANG], ANCHORED)
+    l_d = 1.3 * 0.45 * 0.8 * 400 / math.sqrt(32) * 19.5
+    for support, c_end, l_av in ((1, 125, 325), (3, 75, 375)):
+        entries = sheet.entries_of(f"anchorage-end-{support}-top-1")
+        assert (entries["c_end"].value, entries["l_av"].value) == (c_end, l_av)
+        assert entries["development"].value == (pytest.approx(l_d), l_av)
+        assert not entries["development"]
 
 
 def test_smaller_bars_are_no_cure_of_cracks_where_they_do_not_do() -> None:
