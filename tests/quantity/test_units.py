@@ -53,6 +53,7 @@ def test_every_unit_is_that_of_pints_default_registry(spelling: str, independent
         ("kN.m", "N.mm", "1000000"),
         ("kPa", "MPa", "0.001"),
         ("kN/m3", "N/mm3", "0.000001"),  # 1000 N / 1e9 mm3
+        ("kN/mm", "kN/m", "1000"),  # stiffness of an elastic support
         ("m4", "mm4", "1000000000000"),
         ("h", "min", "60"),
         ("d", "h", "24"),

@@ -83,7 +83,14 @@ _KINDS: dict[str, tuple[str, dict[str, str]]] = {
     ),
     "load per length": (
         "N/mm",
-        {"N/mm": "N/mm", "N/m": "N/m", "kN/m": "kN/m", "plf": "lbf/ft", "klf": "kip/ft"},
+        {
+            "N/mm": "N/mm",
+            "N/m": "N/m",
+            "kN/m": "kN/m",
+            "plf": "lbf/ft",
+            "klf": "kip/ft",
+            "kN/mm": "kN/mm",  # stiffness of a spring, of the same dimension
+        },
     ),
     "stress or pressure": (
         "MPa",
