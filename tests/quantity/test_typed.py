@@ -27,6 +27,7 @@ from lineproof.quantity import UNITS, echo, factor, read_quantity, registry
         ("0.30 m", "mm", 300.0, "0.30"),  # zeros typed are kept
         ("+4.8 kPa", "MPa", 0.0048, "4.8"),
         ("-.5 kN", "N", -500.0, "-0.5"),
+        ("−0.10 m", "mm", -100.0, "-0.10"),  # a true minus, as printed
         ("5. mm", "mm", 5.0, "5"),
         ("2E+05 MPa", "MPa", 200000.0, "2e5"),
         ("1e-3 m", "mm", 1.0, "1e-3"),
@@ -80,7 +81,7 @@ HOSTILE: list[Any] = [
     "nan MPa", "inf MPa", "-inf", "NaN", "Infinity MPa", math.inf, -math.inf, Decimal("NaN"),
     Decimal("sNaN"), Decimal("Infinity"), 10**5000, -(10**5000), 10**400, "1e999 MPa", "1e400",
     "9" * 10_000 + " MPa", "1" + "0" * 100 + " MPa", "1.2.3 MPa", "1 2 MPa", "1_000 MPa",
-    "0x20 MPa", "٣٢ MPa", "３２ MPa", "−32 MPa", "32 MPa MPa", "32 9**9**9", "32 m**9**9**9",
+    "0x20 MPa", "٣٢ MPa", "３２ MPa", "−−32 MPa", "32 MPa MPa", "32 9**9**9", "32 m**9**9**9",
     "32 __import__('os')", "9**9**9", "32 MPa; 5", "32 MPa\x00", "32" + " " * 100_000,
     "3" * 100_000, "(" * 10_000, "1e5e5 MPa", "--5 MPa", "5e MPa", ".", "+", "e5 MPa", b"32 MPa",
     {"a": 1}, object(), 3 + 4j, "\ud800 MPa", "32\nMPa\n" * 2000, {1, 2}, range(3),

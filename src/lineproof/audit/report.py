@@ -283,8 +283,8 @@ def _judged_rows(judged: Iterable[Judged], graph: Graph) -> Iterator[list[str]]:
 
 
 def _interval(interval: Interval, node: Node) -> str:
-    low, high = (node.number_text(value) for value in (interval.low, interval.high))
-    return _with_unit(low if low == high else f"{low} to {high}", node.unit)
+    ends = dict.fromkeys(node.number_text(value) for value in (interval.low, interval.high))
+    return f"{' to '.join(map(number_text, ends))} {unit_text(node.unit)}".rstrip()
 
 
 def _number(value: float, node: Node) -> str:

@@ -19,6 +19,7 @@ from lineproof.drawing.shapes import (
     Text,
     words,
 )
+from lineproof.quantity.digits import MINUS
 
 TICK_TEXT = 2.6
 TICK_LENGTH = 1.0
@@ -75,7 +76,7 @@ def tick_texts(ticks: Sequence[float]) -> tuple[str, ...]:
     for tick in ticks:
         text = f"{abs(tick):,.{decimals}f}"
         text = text.replace(",", "\u2009" if abs(tick) >= GROUPED_FROM else "")
-        texts.append(f"−{text}" if tick < 0 else text)
+        texts.append(f"{MINUS}{text}" if tick < 0 else text)
     return tuple(texts)
 
 

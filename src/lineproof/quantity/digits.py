@@ -24,6 +24,8 @@ MOST_DIGITS = 6
 ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
+MINUS = "−"
+"""The sign that is printed; records and what is typed have a hyphen in its place."""
 MOST_KEPT = 16384
 """Rounded numbers that are kept: the lines of a beam use the same ones again and again."""
 _EXACT = Context(prec=400, rounding=ROUND_HALF_UP)
@@ -69,6 +71,25 @@ def number_text(number: Decimal) -> str:
     if rounded_away > power:
         power = exponent  # 200e-18 would show digits that were rounded away
     return f"{number.scaleb(-power, _EXACT):f}e{power}"
+
+
+def with_minus(text: str) -> str:
+    """Return a number text with a true minus, as it stands in sentences, tables and figures.
+
+    >>> with_minus("-12.5"), with_minus("2-25M")
+    ('−12.5', '2-25M')
+    """
+    return f"{MINUS}{text[1:]}" if text.startswith("-") else text
+
+
+def fixed(value: float, decimals: int) -> str:
+    """Return a number for a sentence or figure with so many decimals; nothing has no sign.
+
+    >>> fixed(-0.1, 2), fixed(-0.3, 0)
+    ('−0.10', '0')
+    """
+    text = f"{value:.{decimals}f}"
+    return with_minus(text) if text.strip("-0.") else text.lstrip("-")
 
 
 def rounded_text(value: float | Decimal, digits: int) -> str:

@@ -10,6 +10,7 @@ from functools import lru_cache
 from typing import Protocol, runtime_checkable
 
 from lineproof.errors import UserError
+from lineproof.quantity.digits import MINUS
 from lineproof.quantity.units import (
     Unit,
     example_unit,
@@ -77,8 +78,8 @@ def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
     ``name`` is the input named in the error; a bare number is taken only where ``unit`` is "".
     Raises :class:`UserError` that says what to type.
 
-    >>> read_quantity("span", "7.6 m", "mm").value
-    7600.0
+    >>> read_quantity("span", "7.6 m", "mm").value, read_quantity("start", "−0.1 m", "mm").value
+    (7600.0, -100.0)
     >>> read_quantity("f_c", "32", "MPa")
     Traceback (most recent call last):
     lineproof.errors.UserError: f_c: '32' has no unit; write '32 MPa'
@@ -97,7 +98,8 @@ def _read(name: str, given: QuantityInput, unit: str) -> Typed:
         raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
     if not isinstance(given, str | int | float | Decimal):
         return _read_pint(name, given, wanted)
-    text = " ".join(given.split()) if isinstance(given, str) else _plain(given)
+    # A place told in a package has a true minus, and is typed back with it.
+    text = " ".join(given.replace(MINUS, "-").split()) if isinstance(given, str) else _plain(given)
     match = _TYPED.match(text)
     if match is None or match[2].startswith(","):
         raise UserError(f"{name}: {echo(given)} is not a number with a unit; {_hint(text, wanted)}")

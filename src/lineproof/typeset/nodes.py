@@ -11,6 +11,7 @@ from dataclasses import dataclass
 from typing import Literal
 
 from lineproof.formula.hashed import Hashed, kept_hash
+from lineproof.quantity.digits import MINUS
 
 Role = Literal["binary", "relation", "prefix", "comma", "open", "close"]
 
@@ -128,7 +129,6 @@ class Fence(Hashed):
 
 Math = Letter | Word | Digits | Sign | Thin | Unit | Prime | Row | Fraction | Root | Scripts | Fence
 
-MINUS = "−"
 TIMES = "×"
 PLUS = Sign("+", "binary")
 SUBTRACT = Sign(MINUS, "binary")

@@ -7,8 +7,8 @@ from collections.abc import Mapping
 from functools import lru_cache
 
 from lineproof.formula.notation import Notation, Symbol, symbol_from_id
+from lineproof.quantity.digits import MINUS, with_minus
 from lineproof.typeset.nodes import (
-    MINUS,
     MULTIPLY,
     NEGATE,
     Digits,
@@ -137,11 +137,11 @@ def value_text(text: str, unit: str) -> str:
 def told(text: str, unit: str) -> str:
     """Return number and unit for a sentence that is also told in a terminal, digits as they stand.
 
-    >>> told("12500", "kN.m"), told("35", "deg"), told("4", "")
-    ('12500 kN·m', '35°', '4')
+    >>> told("12500", "kN.m"), told("35", "deg"), told("-4", "")
+    ('12500 kN·m', '35°', '−4')
     """
     space = "" if unit in ("", "deg") else " "
-    return text + space + unit_text(unit)
+    return with_minus(text) + space + unit_text(unit)
 
 
 def symbol_of(symbol_id: str, notation: Notation) -> Symbol:

@@ -254,5 +254,5 @@ def test_words_say_what_is_drawn() -> None:
     alt = elevation().alt
 
     assert "span 2 of 9200 mm, 620 mm deep" in alt
-    assert "T01 3-20M from -175 to 1525" in alt
+    assert "T01 3-20M from −175 to 1525" in alt
     assert "span 1 12-10M at 125" in alt

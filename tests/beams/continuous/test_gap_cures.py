@@ -120,7 +120,7 @@ TOLD: list[tuple[tuple[str, ...], str, list[Row], list[Row]]] = [
         swapped(OVER, row("top", "3-25M", 4.10, 7.90)),
     ),
     (
-        ("coverage-gap-1",), f"further bars 2-20M from -0.10 to 0.95 {AXIS}",
+        ("coverage-gap-1",), f"further bars 2-20M from −0.10 to 0.95 {AXIS}",
         [*RUNS, row("bottom", "2-20M", -0.1, 0.95)], [*RUNS, row("bottom", "1-20M", -0.1, 0.95)],
     ),
     (
@@ -178,7 +178,7 @@ def test_every_cure_of_bars_that_is_told_is_typed_in_above(sheet: Sheet) -> None
 # The layer of a web of 400 mm takes six bars 20M: (400 - 2*63.8)/5 - 19.5 = 35 mm clear, 30 at
 # least; seven stand 25.9 mm apart. That of 350 mm takes five, 36.1 mm apart; six stand 25 mm apart.
 FURTHER = [
-    ("400 mm", "8 kPa", "2-15M", "4-20M from -0.10 to 5.40", "", row("bottom", "4-20M", -0.1, 5.4)),
+    ("400 mm", "8 kPa", "2-15M", "4-20M from −0.10 to 5.40", "", row("bottom", "4-20M", -0.1, 5.4)),
     (
         "350 mm", "10 kPa", "4-20M", "2-20M from 0.45 to 4.55", ", in a second layer",
         row("bottom", "2-20M", 0.45, 4.55, layer=2),

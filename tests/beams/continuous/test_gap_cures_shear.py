@@ -64,10 +64,10 @@ def test_further_bars_ask_for_more_tension_than_those_there() -> None:
 def test_bars_that_would_leave_the_gap_so_are_not_told(sheet: Sheet) -> None:
     text = cure(sheet, "coverage-bottom-tension")
     assert "all loads, dead load too" in text
-    assert "further bars 4-25M from -0.15 to 8.85 m" not in text
+    assert "further bars 4-25M from −0.15 to 8.85 m" not in text
 
 
 def test_places_are_told_to_the_mm_that_was_tried() -> None:
     assert [metres(x) for x in (18813.0, 3150.0, -100.0, 0.0)] == [
-        "18.813", "3.15", "-0.10", "0.00",
+        "18.813", "3.15", "−0.10", "0.00",
     ]  # fmt: skip

@@ -15,6 +15,7 @@ from lineproof.audit.effects import place_of
 from lineproof.audit.graph import Graph, Node
 from lineproof.errors import UserError
 from lineproof.quantity import echo, internal_factor, read_quantity
+from lineproof.quantity.digits import MINUS
 
 CLAIMED = ("claimed", "value")
 NAMES = ("id", "label", "symbol")
@@ -161,7 +162,7 @@ class _Reader:
     # -- the value ---------------------------------------------------------------------------
 
     def _value(self, row: Row, node: Node, typed: str) -> Claim | None:
-        text = " ".join(typed.replace("−", "-").split())
+        text = " ".join(typed.replace(MINUS, "-").split())
         grouped = _GROUPED.match(text)
         if grouped is not None:
             plain = re.sub("[ ,']", "", grouped[0])

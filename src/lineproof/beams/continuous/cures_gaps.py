@@ -43,6 +43,7 @@ from lineproof.beams.continuous.resistance_cover import (
 )
 from lineproof.beams.continuous.resistance_demand import NOTHING, SpanDemand, demand_at, demand_of
 from lineproof.errors import UserError
+from lineproof.quantity.digits import fixed
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import flexure
 from lineproof.standards.a23_3.bars import BARS
@@ -252,9 +253,9 @@ def metres(x: float) -> str:
     """Write a place [mm] in m, with all its digits, two at least: it is to be typed back.
 
     >>> metres(18813.0), metres(3150.0), metres(-100.0)
-    ('18.813', '3.15', '-0.10')
+    ('18.813', '3.15', '−0.10')
     """
-    whole, digits = f"{x / 1e3:.6f}".split(".")
+    whole, digits = fixed(x / 1e3, 6).split(".")
     return f"{whole}.{digits.rstrip('0').ljust(2, '0')}"
 
 

@@ -11,6 +11,7 @@ import numpy as np
 from lineproof.beams.continuous.figure_along import Along, Curve, Mark, along_figure
 from lineproof.beams.continuous.layout import BeamOutline
 from lineproof.drawing import Dash, Figure, Runs
+from lineproof.quantity.digits import fixed
 
 DASHES: tuple[Dash, ...] = ("solid", "long", "dotted", "chain")
 
@@ -83,9 +84,8 @@ def _mark(curves: Sequence[DeflectionCurve], index: int) -> Mark:
         piece = curve.pieces[index]
         most = max(range(len(piece.x)), key=lambda i: abs(piece.w[i]))
         place, value = piece.x[most], piece.w[most]
-        sign = "−" if value < 0.0 else ""
         name = f"({_letter(number)}) " if len(curves) > 1 else ""
-        lines.append(((f"{name}{sign}{abs(value):.1f}", "roman"),))
+        lines.append(((f"{name}{fixed(value, 1)}", "roman"),))
     return Mark(place, value, tuple(lines))
 
 

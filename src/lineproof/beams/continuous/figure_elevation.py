@@ -19,6 +19,7 @@ from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.drawing import LIGHT, OUTLINE, Arrow, Dimension, Figure, Line, Shape, Text, words
 from lineproof.drawing.metrics import text_width
 from lineproof.drawing.paper import FIT_MARGIN
+from lineproof.quantity.digits import fixed
 
 TOP_ROW = 5.0
 """Where the rows of top bars begin over the beam, mm on paper."""
@@ -187,7 +188,7 @@ def _alt(seen: View, detailing: Detailing, short: Sequence[Short]) -> str:
     low, high = seen.own
     for face in ("bottom", "top"):
         runs = [
-            f"{run.mark} {run.number}-{run.size} from {run.start:.0f} to {run.end:.0f}"
+            f"{run.mark} {run.number}-{run.size} from {fixed(run.start, 0)} to {run.end:.0f}"
             for run in detailing.bars
             if run.face == face and run.start < high and run.end > low
         ]

@@ -12,6 +12,7 @@ from types import MappingProxyType
 from lineproof.beams.continuous.figure_along import Along, Curve, Mark, along_figure
 from lineproof.beams.continuous.layout import BeamOutline
 from lineproof.drawing import Figure, Runs, symbol
+from lineproof.quantity.digits import fixed
 
 KNM, KN = 1e-6, 1e-3
 
@@ -89,8 +90,7 @@ def _scaled(x: Sequence[float], y: Sequence[float], factor: float) -> list[tuple
 
 
 def _value(name: str, sub: str, value: float) -> Runs:
-    sign = "−" if value < 0.0 else ""
-    return (*symbol(name, sub), (f" = {sign}{abs(value):.0f}", "roman"))
+    return (*symbol(name, sub), (f" = {fixed(value, 0)}", "roman"))
 
 
 def _mark(x: float, demand: float, resistance: float, name: str) -> Mark:

@@ -33,6 +33,7 @@ from lineproof.drawing import (
     words,
 )
 from lineproof.drawing.metrics import text_width
+from lineproof.quantity.digits import fixed
 
 WIDTH = 174.0
 RIGHT = 7.0
@@ -151,22 +152,17 @@ def _stretches(axes: Sequence[float], loads: Sequence[Load]) -> list[Stretch]:
         start = axes[load.span - 1]
         match load:
             case UniformLoad():
-                new = Stretch(start, axes[load.span], f"{_size(load.w)} kN/m", load.w < 0.0)
+                new = Stretch(start, axes[load.span], f"{fixed(load.w, 1)} kN/m", load.w < 0.0)
                 found = _joined(found, new)
             case PartialLoad():
                 where = f"{load.start / 1e3:.2f} to {load.end / 1e3:.2f}"
-                text = f"{_size(load.w)} kN/m, {where}"
+                text = f"{fixed(load.w, 1)} kN/m, {where}"
                 found.append(Stretch(start + load.start, start + load.end, text, load.w < 0.0))
             case PointLoad():
                 source = f" ({load.source})" if load.source else ""
-                text = f"{_size(load.P / 1e3)} kN at {load.at / 1e3:.2f}{source}"
+                text = f"{fixed(load.P / 1e3, 1)} kN at {load.at / 1e3:.2f}{source}"
                 found.append(Stretch(start + load.at, start + load.at, text, load.P < 0.0))
     return found
-
-
-def _size(value: float) -> str:
-    """Print a size with a true minus."""
-    return f"{'−' if value < 0.0 else ''}{abs(value):.1f}"
 
 
 def _joined(found: list[Stretch], new: Stretch) -> list[Stretch]:

@@ -26,16 +26,15 @@ from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, 
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
+from lineproof.quantity.digits import fixed
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import flexure, shear_bars
 
-_NONE_STAND = (
-    "No {face} bars stand from {start:.2f} to {end:.2f} m from the left axis of span {span}."
-)
+_NONE_STAND = "No {face} bars stand from {start} to {end} m from the left axis of span {span}."
 _ENDS_MEET = (
-    "At {start:.2f} m from the left axis of span {span} {face} bars end and others begin: none is "
+    "At {start} m from the left axis of span {span} {face} bars end and others begin: none is "
     "developed there."
 )
 
@@ -70,7 +69,10 @@ class Laid:
         left = station.x - station.local
         text = _ENDS_MEET if start == end else _NONE_STAND
         return text.format(
-            face=station.face, span=station.span, start=(start - left) / 1e3, end=(end - left) / 1e3
+            face=station.face,
+            span=station.span,
+            start=fixed((start - left) / 1e3, 2),
+            end=fixed((end - left) / 1e3, 2),
         )
 
 

@@ -10,6 +10,8 @@ from functools import cache
 from pathlib import Path
 from typing import Any
 
+from lineproof.quantity.digits import with_minus
+
 FILE = Path(__file__).with_name("cases.toml")
 BASES = ("text opened", "text opened, loads inferred", "from memory", "own evaluation")
 """How far a published value can be trusted; only the first is evidence of its own."""
@@ -102,7 +104,7 @@ def shown(number: str, unit: str) -> str:
     >>> shown("-56.25", "kN.m"), shown("7.2e9", "mm4")
     ('−56.25 kN·m', '7.2 × 10⁹ mm⁴')
     """
-    digits, _, power = number.replace("-", "−").partition("e")
+    digits, _, power = with_minus(number).partition("e")
     raised = f" × 10{power.translate(_RAISED)}" if power else ""
     return f"{digits}{raised} {unit.translate(_UNITS)}".strip()
 
