@@ -87,8 +87,8 @@ def _kind(node: Node, negative: Container[str]) -> Hashable:
 
 def _moment_of(node: Node) -> Hashable:
     """Return what tells one moment from another: what it is worked of, else its own id."""
-    worked = str(node.entry.get("formula", "")).partition("=")[2]
-    return (worked, tuple(sorted(node.args.items()))) if node.is_computed else node.id
+    same = node.tree is not None and (node.tree, tuple(sorted(node.args.items())))
+    return same or node.id
 
 
 def _turned(claim: Claim) -> Claim:

@@ -12,8 +12,6 @@ from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.standards.a23_3.bars import BARS
 
-PART_DEVELOPED = "r_"
-"""How the symbols of the parts developed begin."""
 _TITLES = {
     "A_s": "Bars in tension here, as far as developed",
     "A_sp": "Bars on the other face here, as far as developed",
@@ -42,7 +40,7 @@ def record_area(steps: Steps, symbol: str, shares: Iterable[Share]) -> Entry:
         )
         term = f"{count}*{area}"
         if part < 1:
-            name = f"{PART_DEVELOPED}{letter}{place}"
+            name = f"r_{letter}{place}"
             bound[name] = sheet.given(
                 name, f"{part:.12g}", f"part developed of these bars {size}",
                 source=f"{length:.0f} mm to the end of the bars, of {rise:.0f} mm needed",

@@ -7,7 +7,6 @@ from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous import cures as find
-from lineproof.beams.continuous.bars_counted import PART_DEVELOPED
 from lineproof.beams.continuous.cures import Variable
 from lineproof.record import Entry
 from lineproof.record.entry import GIVEN, LINE
@@ -18,7 +17,7 @@ _SAME = 1e-9
 
 
 @dataclass(frozen=True, slots=True)
-class Developed:
+class CountedInPart:
     """An area of bars of which a part counts: ``whole`` is that of all their sections [mm2]."""
 
     counted: float
@@ -44,12 +43,12 @@ class Developed:
         return Variable(find.up(self.percent, 100, 1), words, "or more", none)
 
 
-def developed(area: Entry) -> Developed | None:
+def developed(area: Entry) -> CountedInPart | None:
     """Return how far the bars of an area count; None where all count in full, or none do."""
     whole = _whole(area)
     if not 0 < area.value < whole * (1 - _SAME):
         return None
-    return Developed(float(area.value), whole)
+    return CountedInPart(float(area.value), whole)
 
 
 def here(steel: Variable) -> Variable:
@@ -69,4 +68,5 @@ def _whole(area: Entry) -> float:
 
 
 def _is_part(entry: Entry) -> bool:
-    return entry.kind == GIVEN and entry.symbol.startswith(PART_DEVELOPED)
+    """Tell whether a factor of an area is the part developed: numbers of bars are whole."""
+    return entry.kind == GIVEN and not entry.unit and 0 < entry.value < 1

@@ -99,7 +99,7 @@ def _short(design: Design) -> list[Short]:
     if not design.given:
         return []
     return [
-        Short(gap.face, gap.span, gap.start, gap.end, f"gap {gap.reach}" if gap.bare else gap.reach)
+        Short(gap.face, gap.span, gap.start, gap.end, "gap " * gap.bare + " to ".join(gap.ends))
         for gap in design.coverage.gaps
     ]
 

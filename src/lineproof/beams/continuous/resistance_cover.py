@@ -91,13 +91,13 @@ class Gap:
     def title(self) -> str:
         """Where it is, from the left axis of its span, as a check of it is called."""
         what = f"Gap in the {self.face} bars" if self.bare else f"Not enough {self.face} bars"
-        return f"{what}, span {self.span}, {self.reach} m from its left axis"
+        return f"{what}, span {self.span}, {' to '.join(self.ends)} m from its left axis"
 
     @property
-    def reach(self) -> str:
-        """From where to where it reaches, from the left axis of its span [m]."""
+    def ends(self) -> tuple[str, str]:
+        """Where it begins and ends, from the left axis of its span, as printed [m]."""
         left = self.at.x - self.at.local
-        return f"{(self.start - left) / 1e3:.2f} to {(self.end - left) / 1e3:.2f}"
+        return f"{(self.start - left) / 1e3:.2f}", f"{(self.end - left) / 1e3:.2f}"
 
     def __str__(self) -> str:
         """Say where it is, and what acts and holds at its worst station."""

@@ -85,7 +85,8 @@ def _record_gap(laid: Laid, gap: Gap, number: int) -> None:
     """Record the worst station of a gap that holds none of those recorded for its face."""
     record = record_tension if gap.at.by_tension else record_moment
     name = f"{gap.face.capitalize()} bars"
-    title = f"{name}: worst station of span {gap.span} between {gap.reach.replace('to', 'and')} m"
+    start, end = gap.ends
+    title = f"{name}: worst station of span {gap.span} between {start} and {end} m"
     record(laid, gap.at, gap_key(number), title)
 
 

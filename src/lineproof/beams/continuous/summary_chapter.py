@@ -94,7 +94,7 @@ def record_summary(design: Design, cures: Found) -> None:
 def _tables(
     design: Design,
 ) -> Iterator[tuple[str, str, list[str], Sequence[float], Iterable[Row]]]:
-    yield "flexure", "Flexure: what governs", FLEXURE, FLEXURE_WIDTHS, flexure_rows(design.model)
+    yield "flexure", "Flexure: what governs", FLEXURE, FLEXURE_WIDTHS, flexure_rows(design)
     yield "shear", "Shear: what governs", SHEAR, SHEAR_WIDTHS, shear_rows(design)
     turned = list(torsion_rows(design))
     if turned:

@@ -6,6 +6,7 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 
 from lineproof.beams.analysis.arrangements import LIVE
+from lineproof.beams.bars import bars_text
 from lineproof.beams.continuous.deflection_service import deflection_key
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import bars_of
@@ -65,43 +66,38 @@ def ratio_text(check: Entry) -> str:
     return f"{shown} FAILS".strip()
 
 
-def flexure_rows(model: Model) -> Iterator[Row]:
+def flexure_rows(design: Design) -> Iterator[Row]:
     """Give a row for every span and every face of a support, from left to right."""
+    model = design.model
     faces = faces_of(model)
     spans = set(sagging_spans(model))
     for span in range(1, model.spans + 1):
         yield from (
-            _hog(model, face) for face in faces if face.support == span and face.side == "right"
+            _hog(design, face) for face in faces if face.support == span and face.side == "right"
         )
         if span in spans:
-            yield _sag(model, span)
+            yield _sag(design, span)
         yield from (
-            _hog(model, face) for face in faces if face.support == span + 1 and face.side == "left"
+            _hog(design, face) for face in faces if face.support == span + 1 and face.side == "left"
         )
 
 
-def _sag(model: Model, span: int) -> Row:
+def _sag(design: Design, span: int) -> Row:
+    model = design.model
     entries = model.sheet.entries_of(f"sag-{span}")
     counted = entries | bars_of(model.sheet, f"sag-{span}")
+    text = bars_text(design.bottom_bars(span)) or "none"
     if not has_sag(model, span):
         A_s = printed(counted["A_s"].value, "mm2")
-        M_r = printed(entries["M_r"].value, "kN.m") if "M_r" in entries else ""
-        cells = (f"span {span}", "no tension at the bottom", "", "", _bars(entries), A_s, M_r, "")
+        M_r = printed(entries["M_r"].value, "kN.m")
+        cells = (f"span {span}", "no tension at the bottom", "", "", text, A_s, M_r, "")
         return Row(cells, None)
     case = short_case(model.forces.sag(span).case)
-    return _moment_row(f"span {span}", case, entries, counted, _bars(entries))
+    return _moment_row(f"span {span}", case, entries, counted, text)
 
 
-def _bars(entries: Mapping[str, Entry]) -> str:
-    """Return the bars of a section as noted, without where they come from."""
-    text = str(entries["bars-text"].source.text)
-    head = text.partition(": ")[2]
-    for origin in (", chosen", ", given", ", as given"):
-        head = head.partition(origin)[0]
-    return head.rstrip(".")
-
-
-def _hog(model: Model, face: Face) -> Row:
+def _hog(design: Design, face: Face) -> Row:
+    model = design.model
     entries = model.sheet.entries_of(face.key)
     name = f"support {face.support}, {face.side}"
     if flexure.STRENGTH.key not in entries:
@@ -113,7 +109,7 @@ def _hog(model: Model, face: Face) -> Row:
         case = short_case(model.forces.hog(face.support, face.side).case)
     own = face if "bars-text" in entries else _worst_face(model, face)
     worst = model.sheet.entries_of(own.key) | bars_of(model.sheet, own.key)
-    return _moment_row(name, case, entries, worst, _bars(worst))
+    return _moment_row(name, case, entries, worst, str(design.top_bars(own) or "none"))
 
 
 def _worst_face(model: Model, face: Face) -> Face:
