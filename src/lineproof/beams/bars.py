@@ -85,6 +85,17 @@ BarLayers = tuple[BarLayer, ...]
 """Layers from the tension face inward."""
 
 
+def centre_of(groups: Iterable[tuple[float, float]]) -> tuple[float, float]:
+    """Return the area of bars [mm2] and the depth of their centre [mm], from both of each group.
+
+    >>> centre_of([(1000.0, 540.0), (500.0, 480.0)])
+    (1500.0, 520.0)
+    """
+    kept = tuple(groups)
+    area = sum(each for each, _ in kept)
+    return area, sum(each * depth for each, depth in kept) / area
+
+
 def of_one_size(layers: BarLayers) -> bool:
     """Tell whether every layer has bars of one size."""
     return all(layer.thinner is None for layer in layers)

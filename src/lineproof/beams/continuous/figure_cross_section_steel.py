@@ -9,6 +9,7 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from itertools import groupby
 
+from lineproof.beams.bars import centre_of
 from lineproof.beams.continuous.bending import BentShape, stirrup_radius
 from lineproof.beams.continuous.figure_chain import ahead, outlines
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face, StirrupZone
@@ -16,10 +17,9 @@ from lineproof.beams.continuous.schedule_stirrups import stirrup_set
 from lineproof.beams.figure_section import Shown
 from lineproof.beams.section_shape import SectionShape
 from lineproof.drawing import THIN, Circle, Shape
-from lineproof.standards.a23_3.bars import BARS
+from lineproof.standards.a23_3.bars import BARS, LAYER_DISTANCE
 
 STROKE = THIN * 1.3
-LEAST_LAYER = 30.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -65,8 +65,7 @@ class Steel:
         for layer in self.layers(face):
             thick = max(run.diameter for run in layer)
             if below:  # as the depth has it, by the thicker of both layers
-                thicker = max(below, thick)
-                at += below + max(1.4 * thicker, 1.4 * self.aggregate, LEAST_LAYER)
+                at += below + LAYER_DISTANCE.function(max(below, thick), self.aggregate)
             places.append(at)
             below = thick
         return places
@@ -83,8 +82,7 @@ class Steel:
             beside = (r for r in self.runs if (r.face, r.place) == (tension, "overhang"))
             placed += [(run, outer) for run in beside]
         parts = [(run.area, self.depth - rest - run.diameter / 2) for run, rest in placed]
-        area = sum(each for each, _ in parts)
-        return sum(each * depth for each, depth in parts) / area if area else None
+        return centre_of(parts)[1] if parts else None
 
 
 def steel_at(

@@ -15,7 +15,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from lineproof.beams.analysis.curves import Floats
-from lineproof.beams.bars import BarLayer, BarLayers, layer_of
+from lineproof.beams.bars import BarLayer, BarLayers, centre_of, layer_of
 from lineproof.beams.continuous.anchorage import bar_of, develop, hook_at, value
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
@@ -191,13 +191,15 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
 
 def effective_depth(designed: Designed, layers: BarLayers, h: float) -> float:
     """Return the effective depth of layers counted in full [mm]."""
-    total = moment = 0.0
-    for number, layer in enumerate(layers):
-        first = layers[0].diameter if number else 0.0
-        for group in layer.groups:
-            total += group.area
-            moment += group.area * (h - _distance(designed, group.diameter, first))
-    return moment / total
+    groups = (
+        (group, layers[0].diameter if number else 0.0)
+        for number, layer in enumerate(layers)
+        for group in layer.groups
+    )
+    _, d = centre_of(
+        (group.area, h - _distance(designed, group.diameter, first)) for group, first in groups
+    )
+    return d
 
 
 def top_layers(designed: Designed, support: int) -> BarLayers:

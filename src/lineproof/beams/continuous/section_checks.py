@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
-from lineproof.beams.bars import BarLayer, BarLayers, TopBars, of_one_size, spaced
+from lineproof.beams.bars import BarLayer, BarLayers, TopBars, centre_of, of_one_size, spaced
 from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation, value
 from lineproof.beams.inputs import Shape
 from lineproof.formula import Formula
@@ -55,9 +55,7 @@ def _put_all(at: Numbers, groups: Iterable[tuple[float, float]]) -> None:
 
     ``groups`` gives area and depth of bars of one size in one layer.
     """
-    kept = tuple(groups)
-    at["A_s"] = sum(A for A, _ in kept)
-    at["d"] = sum(A * d for A, d in kept) / at["A_s"]
+    at["A_s"], at["d"] = centre_of(groups)
 
 
 def _first_groups(at: Numbers, layer: BarLayer) -> list[tuple[float, float]]:

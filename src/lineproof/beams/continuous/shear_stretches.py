@@ -14,6 +14,7 @@ from itertools import pairwise
 
 import numpy as np
 
+from lineproof.beams.bars import centre_of
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.faces import faces_of, has_sag, hogging
 from lineproof.beams.continuous.forces import End
@@ -159,8 +160,7 @@ def _stretches(
 def depth_over(designed: Designed, span: int, over: BarsOver) -> float:
     """Return the effective depth of the bars of a stretch, counted in full [mm]."""
     h, runs = designed.outline.depths[span - 1], [share.run for share in over.shares]
-    moment = sum(run.area * (h - distance_of(designed, run)) for run in runs)
-    return moment / sum(run.area for run in runs)
+    return centre_of((run.area, h - distance_of(designed, run)) for run in runs)[1]
 
 
 def _counted_between(designed: Designed, span: int) -> tuple[float, float]:

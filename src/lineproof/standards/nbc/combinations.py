@@ -50,8 +50,8 @@ DEAD, LIVE = "1.25", "1.5"
 CASES = (
     Case(1, ("1.4",)),
     Case(2, (DEAD, "0.9"), ("L", LIVE), (Companion("S", "1.0"), Companion("W", "0.4"))),
-    Case(3, ("1.25", "0.9"), ("S", "1.5"), (Companion("L", "1.0", "0.5"), Companion("W", "0.4"))),
-    Case(4, ("1.25", "0.9"), ("W", "1.4"), (Companion("L", "0.5", "0.5"), Companion("S", "0.5"))),
+    Case(3, (DEAD, "0.9"), ("S", "1.5"), (Companion("L", "1.0", "0.5"), Companion("W", "0.4"))),
+    Case(4, (DEAD, "0.9"), ("W", "1.4"), (Companion("L", "0.5", "0.5"), Companion("S", "0.5"))),
     Case(5, ("1.0",), ("E", "1.0"), (Companion("L", "0.5", "0.5"), Companion("S", "0.25"))),
 )
 FACTORS = tuple(
