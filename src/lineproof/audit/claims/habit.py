@@ -90,7 +90,7 @@ def numbers_of(graph: Graph, claims: Iterable[Claim], worlds: Worlds) -> tuple[N
     return tuple(
         _number(node, claim, worlds)
         for node, claim in pairs
-        if node.is_computed and Decimal(claim.typed)
+        if node.is_computed and Decimal(claim.typed) != 0
     )
 
 
@@ -151,10 +151,12 @@ def others_made(
     same = [n for n in others if n.unit == claim.unit]
     if _is_finer(same, habit):
         return 0
-    for among in ([n for n in same if n.part == node.part], same):
-        made, broken = counted(among, habit)
-        if broken > made:
-            return 0
+    made, broken = counted([n for n in same if n.part == node.part], habit)
+    if broken > made:
+        return 0
+    made, broken = counted(same, habit)
+    if broken > made:
+        return 0
     if made < HABIT and not broken and own.digits is not None:
         alike = [n for n in others if _is_length(n.unit) == _is_length(claim.unit)]
         by_digits, broken = counted(alike, Habit(None, own.digits, cut))

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
-from functools import partial
 from typing import NamedTuple
 
 from lineproof.audit.slips.edits import TOP, Edit, Line
@@ -26,8 +25,8 @@ _RULES = {
     ),
 }
 _FACE = "the moment at the axis less V*b/3, b the width of the support, for that at its face"
-_THIRD = 2 / 3
-"""A third of the width of a support is so much of the half of it from axis to face."""
+_OF_HALF = 2 / 3
+"""A third of the width of a support, in halves of it: x_f is half the width."""
 
 
 def rules_of_thumb(line: Line) -> Iterator[Edit]:
@@ -39,8 +38,8 @@ def rules_of_thumb(line: Line) -> Iterator[Edit]:
         under = [line.pairs[names[name]] for name in rule.under]
         if all(value for value, _ in (*over, *under)):
             value = rule.factor * math.prod(v for v, _ in over) / math.prod(v for v, _ in under)
-            half = abs(value) * sum(half / abs(v) for v, half in (*over, *under))
-            yield Edit("thumb", TOP, value, half, partial("{}".format, rule.words))
+            half = abs(value) * sum(each / abs(v) for v, each in (*over, *under))
+            yield Edit("thumb", TOP, value, half, lambda: rule.words)
     if line.node.symbol == "M_f" and line.node.part.startswith("hog"):
         yield from _at_a_third(line, names)
 
@@ -58,6 +57,6 @@ def _at_a_third(line: Line, names: dict[str, str]) -> Iterator[Edit]:
     (moment, of_moment), (shear, of_shear), (x, _) = (
         line.pairs[names[name]] for name in ("M_sn", "V_sn", "x_f")
     )
-    value = abs(moment) - shear * x * _THIRD
-    half = of_moment + of_shear * x * _THIRD
-    yield Edit("thumb", TOP, value, half, partial("{}".format, _FACE))
+    value = abs(moment) - shear * x * _OF_HALF
+    half = of_moment + of_shear * x * _OF_HALF
+    yield Edit("thumb", TOP, value, half, lambda: _FACE)

@@ -273,7 +273,10 @@ def bottom_places(outline: BeamOutline, forces: Forces) -> list[float]:
 
 
 def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
-    """Return the top bars that stand at a place; raises :class:`UserError` as above."""
+    """Return the top bars that stand at a place, x from the axis of support 1 [mm].
+
+    Raises :class:`UserError` for layers of three sizes and overhangs of two.
+    """
     faults = FaultList()
     made = _top_at(tuple(runs), x, name, faults)
     faults.raise_if_any()
@@ -289,8 +292,8 @@ def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) ->
             f"bar runs: {name}: {', '.join(sizes)} stand in the overhangs; write bars of one size "
             f"there, such as {sizes[-1]}"
         )
-    same = not web or not beside or sizes == [web[0].size]
-    return TopBars(web, number, "" if same else sizes[0])
+    of_web = not beside or (bool(web) and sizes == [web[0].size])
+    return TopBars(web, number, "" if of_web else sizes[0])
 
 
 def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int, at: float) -> BarLayers:

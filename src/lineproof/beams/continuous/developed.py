@@ -1,15 +1,16 @@
 """Bars that count at a place, as far as they are developed there: in numbers and as lines.
 
 Of given bars strength, summary and cracked sections take the area counted here. It is that of the
-resistance along the beam (``resistance.provide``), written so that it is followed by hand: two like
-bars that are lapped and together reach yield stand as one.
+resistance along the beam (``resistance.provide``) or less, written so that it is followed by hand:
+two like bars that are lapped and together reach yield stand as one, and of two unlike ones, one of
+which reaches yield, that one stands alone.
 """
 
 from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.anchorage_record import plain
 from lineproof.beams.continuous.cutoff_sets import Group, groups_met, record_second_depth
@@ -57,7 +58,7 @@ class Developed:
 
 
 def developed_at(standing: Sequence[Standing], face: Face, x: float) -> tuple[Developed, ...]:
-    """Return the bars of a face that count at a place along the beam."""
+    """Return the bars of a face that count at a place along the beam, x from support 1 [mm]."""
     own = [bars for bars in standing if bars.run.face == face]
     found = {i: made for i, bars in enumerate(own) if (made := _of(bars, x)).length > 0}
     aside: set[int] = set()
@@ -69,7 +70,7 @@ def developed_at(standing: Sequence[Standing], face: Face, x: float) -> tuple[De
             continue  # the soffit steps there
         more, less = sorted((i, j), key=lambda n: found[n].area, reverse=True)
         if like and found[i].part + found[j].part >= 1 - _SAME:
-            found[more] = Developed(own[more].run, found[more].rise, found[more].rise)
+            found[more] = replace(found[more], length=found[more].rise)
             aside.add(less)
         elif not like and found[more].whole:
             aside.add(less)

@@ -35,7 +35,7 @@ def lap_needed(designed: Designed, first: BarRun, second: BarRun) -> float:
 
 
 def lap_between(designed: Designed, first: BarRun, second: BarRun) -> float:
-    """Return the length of a lap of two runs, on the module of the ends."""
+    """Return the length of a lap of two runs, on the module of the ends [mm]."""
     return ceil50(lap_needed(designed, first, second) / 2) * 2
 
 
