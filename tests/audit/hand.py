@@ -11,7 +11,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 
 from lineproof.audit.claims.judge import SlipFinder, judge
-from lineproof.audit.data import Claim, Judged, read_from
+from lineproof.audit.data import Claim, Judged, Verdict, read_from
 from lineproof.audit.graph import Graph
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
@@ -64,6 +64,15 @@ def typed(graph: Graph, entry_id: str, text: str, row: int = 0) -> Claim:
     return Claim(
         entry_id, number, unit, float(number) * factor, read_from(number).times(factor), row
     )
+
+
+def verdicts_of(
+    lines: Mapping[str, str], givens: Mapping[str, str], claims: Mapping[str, str]
+) -> dict[str, Verdict]:
+    """Judge numbers typed for lines of the part ``beam``; return the verdicts by symbol."""
+    record = sheet_of(lines, givens).close()
+    made = judged(record, {f"beam/{symbol}": text for symbol, text in claims.items()})
+    return {entry_id.removeprefix("beam/"): each.verdict for entry_id, each in made.items()}
 
 
 def judged(

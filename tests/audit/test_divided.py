@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from lineproof.audit.data import Verdict
 
-from .hand import judged, sheet_of
+from .hand import judged, sheet_of, verdicts_of
 
 GIVENS = {
     "gamma_w": "24 kN/m3", "b_tr": "3.0 m", "h_f": "150 mm", "b_w": "300 mm", "h": "600 mm",
@@ -24,9 +24,7 @@ LINES = {
 
 
 def said(**claims: str) -> dict[str, Verdict]:
-    record = sheet_of(LINES, GIVENS).close()
-    made = judged(record, {f"beam/{symbol}": text for symbol, text in claims.items()})
-    return {i.removeprefix("beam/"): each.verdict for i, each in made.items()}
+    return verdicts_of(LINES, GIVENS, claims)
 
 
 def test_web_over_the_whole_depth_and_slab_between_the_webs() -> None:

@@ -156,7 +156,7 @@ def test_a_coarse_number_among_finer_ones_stays_doubtful(others: dict[str, str])
 
 
 def test_the_same_slip_at_every_place_is_no_habit() -> None:
-    """V_fr is V_f again, with the same clear span for the span: both stay doubtful."""
+    """V_f of two places, with the same clear span for the span: both stay doubtful."""
     record = sheet_of({"V_f = w_f*l/2": "kN", "V_f_2 = w_f*l/2": "kN"}, CLEAR).close()
     both = {"beam/V_f": "120", "beam/V_f_2": "120"}
     made = judged(record, both, find_slips)

@@ -27,7 +27,7 @@ def test_who_rounds_all_numbers_is_asked_nothing(
 ) -> None:
     tally = tallies[f"{way}, habit"]
 
-    assert tally.total() > 80
+    assert tally.total() > 80  # more than eight a beam: not an empty count
     assert set(tally) <= ROUNDED, tally
 
 

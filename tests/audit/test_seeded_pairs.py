@@ -8,7 +8,7 @@ import pytest
 
 from lineproof.audit.data import Verdict
 
-from .hand import judged, sheet_of
+from .hand import judged, sheet_of, verdicts_of
 from .planting_pairs import NUMBERS, Pairs, measured_pairs
 
 
@@ -49,8 +49,7 @@ GIVENS = {"q": "8 kPa", "b_tr": "4 m", "l": "6 m"}
 
 
 def verdicts(**claims: str) -> dict[str, Verdict]:
-    said = judged(sheet_of(LINES, GIVENS).close(), {f"beam/{s}": t for s, t in claims.items()})
-    return {entry_id.partition("/")[2]: each.verdict for entry_id, each in said.items()}
+    return verdicts_of(LINES, GIVENS, claims)
 
 
 def test_a_value_written_wrongly_and_used_as_worked_beside_another_slip() -> None:
