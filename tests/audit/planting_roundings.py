@@ -1,8 +1,9 @@
-"""Honest sheets with coarse numbers: how many of the roundings are called doubtful, or wrong.
+"""Sheets with coarse numbers: what is said of honest roundings, and of slips among them.
 
 ``python -m tests.audit.planting_roundings`` from the root of the project prints the counts. Every
-number is worked from those written above it. On some sheets every number is coarse, as its author's
-habit; on others one in ten, where he rounded for once.
+number is worked from those written above it. On some honest sheets every number is coarse, as its
+author's habit; on others one in ten, where he rounded for once. Slips are planted one a sheet, on
+sheets of two digits throughout.
 """
 
 from __future__ import annotations
@@ -20,8 +21,9 @@ from lineproof.audit.slips.search import searching
 from lineproof.quantity.digits import significant
 from lineproof.quantity.units import internal_factor
 
+from .planting import chosen
 from .planting_beams import BEAMS, beam
-from .planting_slips import three_digits
+from .planting_slips import Planted, three_digits
 
 SELDOM = 10
 """One number in so many is coarse on the sheet of somebody who rounds for once."""
@@ -43,15 +45,23 @@ def fives(node: Node, value: float) -> str:
 WAYS: Mapping[str, Coarse] = {"two digits": two_digits, "sizes to 5 mm": fives}
 
 
-def sheet(graph: Graph, coarse: Coarse, every: int, start: int = 0) -> dict[str, Claim]:
-    """Return the claims of a sheet on which every so many of the coarse numbers are written so."""
+def sheet(
+    graph: Graph, coarse: Coarse, every: int, start: int = 0, slip: Planted | None = None
+) -> dict[str, Claim]:
+    """Return the claims of a sheet on which every so many of the coarse numbers are written so.
+
+    At its line a ``slip`` is worked in place of the formula.
+    """
     values, claims, met = dict(graph.stored), {}, start
     for node in graph:
         if not node.has_value:
             continue
         if node.is_computed:
             try:
-                values[node.id] = node.compute(graph.named(node, values))
+                if slip is not None and slip.id == node.id:
+                    values[node.id] = slip.work(values)
+                else:
+                    values[node.id] = node.compute(graph.named(node, values))
             except (ArithmeticError, ValueError):
                 continue
         factor = internal_factor(node.unit)
@@ -88,6 +98,22 @@ def counted(numbers: Iterable[int], seed: int = 0) -> dict[str, Counter[Verdict]
     return found
 
 
+def counted_slips(numbers: Iterable[int], seed: int = 0) -> Counter[Verdict]:
+    """Count the verdicts on slips that change what is written in two digits."""
+    found: Counter[Verdict] = Counter()
+    for number in numbers:
+        graph = beam(number, seed)
+        honest = sheet(graph, two_digits, 1)
+        for slip in chosen(graph, number, seed):
+            if slip.inputs or slip.written:
+                continue
+            claims = sheet(graph, two_digits, 1, slip=slip)
+            if slip.id in claims and claims[slip.id].typed != honest[slip.id].typed:
+                said = judge(graph, list(claims.values()), searching())
+                found.update(each.verdict for each in said if each.id == slip.id)
+    return found
+
+
 if __name__ == "__main__":
     arguments = argparse.ArgumentParser(description=__doc__)
     arguments.add_argument("step", nargs="?", type=int, default=30, help="every so many beams")
@@ -95,3 +121,5 @@ if __name__ == "__main__":
     given = arguments.parse_args()
     for name, tally in counted(range(0, BEAMS, given.step), given.seed).items():
         sys.stdout.write(f"{name}: {tally.total()}; {dict(tally)}\n")
+    slips = counted_slips(range(0, BEAMS, given.step), given.seed)
+    sys.stdout.write(f"two digits, slips: {slips.total()}; {dict(slips)}\n")
