@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from typing import Any
 
 import pytest
@@ -176,7 +177,7 @@ def test_dead_load_that_lifts_an_end_is_factored_up_and_the_tie_is_on_the_cover(
     is 1.25 D + 1.5 S + 1.0 L = -66.4689 - 36.4095 - 11.0420 = -113.920 kN, while 0.9 D + 1.5 L is
     -64.4 kN only.
     """
-    given = {
+    given: Mapping[str, Any] = {
         "spans": ["2 m", "8.4 m"], "supports": ["wall 300 mm", "column 400 mm", "wall 300 mm"],
         "use": "roof", "snow": "3 kPa",
     }  # fmt: skip

@@ -313,7 +313,7 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
 def _loads_not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     """Return what certain loads would ask for beyond what is calculated."""
     own = inputs.forces_file is None
-    rows = []
+    rows: list[Mapping[str, str]] = []
     if any(load.form == "point" for load in inputs.loads):
         what = "Hanger stirrups where beams carried from the side bring in point loads"
         rows.append({"check": what, "clause": "11.2.12"})

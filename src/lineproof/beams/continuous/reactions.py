@@ -168,7 +168,7 @@ def _least(model: Model, kinds: Sequence[str], support: int) -> None:
         return
 
     def sum_of(each: Combination) -> float:
-        return sum(f * values.get(kind, 0.0) for kind, f in each.factors)
+        return float(sum(f * values.get(kind, 0.0) for kind, f in each.factors))
 
     least = min(factored_combinations(kinds), key=sum_of)
     terms = [(kind, factor_text(f)) for kind, f in least.factors if kind in values]
