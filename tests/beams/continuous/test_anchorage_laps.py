@@ -9,10 +9,11 @@ import pytest
 
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.anchorage_record import (
+    record_crowded,
     record_laps,
     record_lengths,
-    standing_at_lap,
 )
+from lineproof.beams.continuous.beside import crowded, tightest
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars
 from lineproof.beams.continuous.laps import (
     cut_length,
@@ -140,10 +141,88 @@ def test_room_counts_the_bars_that_stand_at_the_lap() -> None:
     """Three further bars end 1 m before the lap: 202.4 - 25.2 - 2 x 25.2 = 126.8 mm are free."""
     designed = beam()
     runs = (*split(designed, WHOLE, [9000.0]), replace(WHOLE, number=3, end=7500.0))
-    assert standing_at_lap(runs, runs[0], runs[1]) == 2
+    assert tightest(designed.basis, runs, runs[1].start, runs[0].end).number == 2
     sheet = sheet_of(designed)
     writers = writers_of(sheet, designed)
     record_laps(writers, record_lengths(writers, runs), runs)
     made = sheet.entries_of("anchorage-lap-1")
     assert made["s_cl"].value == pytest.approx(126.8)
     assert made["lap-room"]
+
+
+def edge() -> Designed:
+    """Two spans of 7.6 m, web 380 mm, cover 40 mm, 10M stirrups, 5-15M and 6-15M at the bottom.
+
+    Between the corner bars in the bends of the stirrups: 380 - 2 x (40 + 11.3 + 22.5) = 232.4 mm.
+    """
+    bare = beam_of((7600.0, 7600.0), ("elastic",) * 3, b_w=380.0, width=450.0)
+    bottom = ((BarLayer(5, "15M"),), (BarLayer(6, "15M"),))
+    return replace(bare, bars=SectionBars(bottom, (TopBars((BarLayer(2, "15M"),)),) * 3, "15M"))
+
+
+CORNERS = BarRun("bottom", 1, 2, "15M", -175.0, 7900.0)
+BESIDE = (CORNERS, replace(CORNERS, start=7300.0, end=15375.0))
+"""Corner bars lapped over the inner support, 300 mm to either side of its axis."""
+
+
+def around_the_axis(right: int) -> tuple[BarRun, ...]:
+    """Inner bars of both spans end 50 mm from the axis, 3 on the left, some on the right."""
+    return (*BESIDE, replace(CORNERS, number=3, end=7550.0), replace(
+        CORNERS, number=right, start=7650.0, end=15375.0,
+    ))  # fmt: skip
+
+
+@pytest.mark.parametrize(
+    ("right", "places", "clear", "fits"),
+    [(4, 6, 30.48, True), (5, 7, 22.73, False)],
+)
+def test_bars_beside_a_lap_are_counted_along_all_of_it(
+    right: int, places: int, clear: float, *, fits: bool
+) -> None:
+    """At the axis the two lapped bars stand alone, beside it 2 + 4 = 6: 232.4/5 - 16 = 30.48 mm.
+
+    At least 30 mm are due: they fit with the lapped bars one above the other, side by side
+    30.48 - 16 = 14.48 mm are left. 2 + 5 = 7 do not fit: 232.4/6 - 16 = 22.73 mm.
+    """
+    designed, runs = edge(), around_the_axis(right)
+    sheet = sheet_of(designed)
+    writers = writers_of(sheet, designed)
+    record_laps(writers, record_lengths(writers, runs), runs)
+    made = sheet.entries_of("anchorage-lap-1")
+    assert made["n_b"].value == places
+    assert made["s_c"].value == pytest.approx(clear, abs=0.01)
+    assert bool(made["bars-fit"]) is fits
+    assert made["s_cl"].value == pytest.approx(clear - 16, abs=0.01)
+    assert not made["lap-room"]
+
+
+def test_where_all_bars_are_lapped_both_neighbours_are() -> None:
+    """3-15M lapped with 3-15M: 232.4/2 - 16 = 100.2 mm, less a bar from either side: 68.2 mm."""
+    designed = edge()
+    runs = tuple(replace(run, number=3) for run in BESIDE)
+    sheet = sheet_of(designed)
+    writers = writers_of(sheet, designed)
+    record_laps(writers, record_lengths(writers, runs), runs)
+    made = sheet.entries_of("anchorage-lap-1")
+    assert made["s_cl"].value == pytest.approx(68.2)
+
+
+def test_bars_that_pass_each_other_are_counted() -> None:
+    """3 and 4 inner bars overlap by 100 mm beside two corner bars that run on: 9 bars.
+
+    232.4/8 - 16 = 13.05 mm; the sections have 6 at most. With the ends apart none is crowded.
+    """
+    designed = edge()
+    whole = replace(CORNERS, end=15375.0)
+    left = replace(CORNERS, number=3, end=7650.0)
+    right = replace(CORNERS, number=4, start=7550.0, end=15375.0)
+    runs = (whole, left, right)
+    (row,) = crowded(designed, runs)
+    assert (row.start, row.end, row.number) == (7550.0, 7650.0, 9)
+    assert crowded(designed, (whole, replace(left, end=7550.0), right)) == []
+    sheet = sheet_of(designed)
+    writers = writers_of(sheet, designed)
+    record_crowded(writers, record_lengths(writers, runs), runs)
+    made = sheet.entries_of("anchorage-beside-1")
+    assert made["s_c"].value == pytest.approx(13.05)
+    assert not made["bars-fit"]

@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass, field
 from decimal import Decimal
 
+from lineproof.beams.bars import spaced
 from lineproof.beams.continuous.anchorage import (
     COVERED_ROW,
     OTHER_ROW,
@@ -20,10 +21,11 @@ from lineproof.beams.continuous.anchorage import (
     room_beside,
     sides_of,
 )
+from lineproof.beams.continuous.beside import Row, crowded, layer_with, tightest
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import PAIR, lap_pairs, level_pairs
+from lineproof.beams.continuous.resistance import level_pairs
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.quantity import Typed
@@ -44,7 +46,7 @@ _CLASS_UNLIKE = (
     "Both bars are spliced at one place: class B, by the length of the thinner bars, and at least "
     "the development length of the thicker ones."
 )
-_AT_LAP = "bars of the layer that stand at the middle of the lap, two that are lapped as one"
+_AT_LAP = "bars of the layer where most stand along the lap, two that are lapped as one"
 
 
 def plain(value: float, unit: str) -> str | Typed:
@@ -237,39 +239,41 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         (kept[i], kept[j])
         for i, j in sorted(level_pairs(designed, kept), key=lambda p: kept[p[1]].start)
     ]
-    seen: set[tuple[Bar, Bar, float, int, Bar]] = set()
+    seen: set[tuple[Bar, Bar, float, int, int, Bar]] = set()
     for first, second in pairs:
         thin, thick = sorted((first, second), key=lambda run: run.diameter)
         length = first.end - second.start
-        beside = standing_at_lap(kept, first, second)
-        row = [thick, *_at_lap(kept, first, second)]
-        widest = bar_of(designed, max(row, key=lambda run: run.diameter))
-        same = (bar_of(designed, thin), bar_of(designed, thick), length, beside, widest)
+        layer = layer_with(designed, kept, first)
+        row = tightest(designed.basis, layer, second.start, first.end)
+        widest = bar_of(designed, row.thickest)
+        sizes = (bar_of(designed, thin), bar_of(designed, thick))
+        same = (*sizes, length, row.number, row.lapped, widest)
         if same not in seen:
             seen.add(same)
-            laid = (length, beside, lengths[widest]["d_b"])
+            laid = (length, row, lengths[widest]["d_b"])
             _record_lap(writers, lengths, (thin, thick), laid, len(seen))
 
 
-def standing_at_lap(runs: Sequence[BarRun], first: BarRun, second: BarRun) -> int:
-    """Return how many bars stand in the layer at the middle of a lap; lapped ones count once."""
-    there = _at_lap(runs, first, second)
-    twice = sum(min(there[i].number, there[j].number) for i, j in lap_pairs(there))
-    return sum(run.number for run in there) - twice
-
-
-def _at_lap(runs: Sequence[BarRun], first: BarRun, second: BarRun) -> list[BarRun]:
-    """Return the runs of the layer at the middle of a lap."""
-    x = (first.end + second.start) / 2
-    layer = (first.face, first.layer, first.place)
-    return [r for r in runs if (r.face, r.layer, r.place) == layer and r.start < x < r.end]
+def record_crowded(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
+    """Record that bars fit beside each other where more stand than in any section, laps apart."""
+    sheet, designed = writers.sheet, writers.designed
+    for number, row in enumerate(crowded(designed, tuple(runs)), start=1):
+        bar = row.thickest
+        title = f"Bars side by side: {bar.face} bars {bar.size}"
+        with sheet.part(f"anchorage-beside-{number}", title):
+            steps = Steps(sheet, lengths[bar_of(designed, bar)])
+            place = f"{row.start / 1000:.2f} to {row.end / 1000:.2f} m from support 1"
+            source = f"as laid, layer {bar.layer}, {place}, where bars pass each other"
+            steps.bind(n_b=sheet.given("n_b", str(row.number), source=source))
+            steps.lines(bar_clause.LEAST_CLEAR, bar_clause.CLEAR)
+            steps.check(bar_clause.FITS)
 
 
 def _record_lap(
     writers: Writers,
     lengths: Lengths,
     sizes: tuple[BarRun, BarRun],
-    laid: tuple[float, int, Entry],
+    laid: tuple[float, Row, Entry],
     number: int,
 ) -> None:
     """Record a lap of a thinner with a thicker bar: its length, bars that stand beside.
@@ -277,7 +281,7 @@ def _record_lap(
     The distances are those of bars that all have the size of the thickest in the layer.
     """
     sheet, designed = writers.sheet, writers.designed
-    (thin, thick), (length, beside, d_b) = sizes, laid
+    (thin, thick), (length, row, d_b) = sizes, laid
     unlike = thin.size != thick.size
     other = f" with {thick.size}" if unlike else ""
     with sheet.part(f"anchorage-lap-{number}", f"Lap of {thin.face} bars {thin.size}{other}"):
@@ -297,12 +301,13 @@ def _record_lap(
         steps.bind(l_lp=provided)
         steps.check(laps.LONG_ENOUGH)
         steps.bind(d_b=larger["d_b"])
-        pair = beside <= PAIR
         if thin.place == "web":
-            n_b = sheet.given("n_b", str(max(beside, PAIR)), source=_AT_LAP)
+            n_b = sheet.given("n_b", str(spaced(row.number)), source=_AT_LAP)
             steps.line(bar_clause.CLEAR, n_b=n_b, d_b=d_b)
         steps.line(bar_clause.LEAST_CLEAR, d_b=d_b)
-        steps.line(laps.CLEAR_PAIR if pair else laps.CLEAR_CORNERS)
+        if thin.place == "web":
+            steps.check(bar_clause.FITS)
+        steps.line(laps.CLEAR_CORNERS if row.all_corners else laps.CLEAR_PAIR)
         if not steps.decide(laps.ROOM):
             sheet.note(
                 "one-above-the-other",

@@ -7,6 +7,7 @@ from dataclasses import replace
 from lineproof.beams.continuous.anchorage_record import (
     Lengths,
     Writers,
+    record_crowded,
     record_laps,
     record_lengths,
     sizes_of,
@@ -59,6 +60,7 @@ def record_lengths_and_ends(writers: Writers, runs: Runs) -> tuple[Writers, Leng
         if designed.bars.top[support - 1].web:
             _record_top(writers, frame, lengths, runs, support)
     record_laps(writers, lengths, runs)
+    record_crowded(writers, lengths, runs)
     return writers, lengths, hooked
 
 

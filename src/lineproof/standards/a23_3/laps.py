@@ -102,7 +102,7 @@ CLEAR_CORNERS = _formula(
 CLEAR_PAIR = _formula(
     "s_cl = s_c - 2*d_b",
     clause="A23.1 6.6.5.2",
-    title="Clear distance at the lap, two bars lapped in contact",
+    title="Clear distance at the lap, both neighbours lapped in contact",
     basis=MECHANICS,
 )
 ROOM = _criterion(
