@@ -14,7 +14,9 @@ from lineproof.beams.continuous.cutoff import Frame, zone_at
 from lineproof.beams.continuous.cutoff_ends import bottom_side, passes, top_side
 from lineproof.beams.continuous.cutoff_record import point_of
 from lineproof.beams.continuous.detailing import hook_ties, lay_bars
-from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars
+from lineproof.beams.continuous.detailing_bottom import lay_bottom
+from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars, TorsionForces
+from lineproof.beams.continuous.detailing_holders import with_holders
 from lineproof.beams.continuous.detailing_record import record_detailing
 from lineproof.beams.continuous.layout import BarRun, BeamOutline
 from lineproof.beams.continuous.resistance import in_line, lap_pairs, stand
@@ -239,6 +241,38 @@ def test_holders_of_the_size_of_the_corners_are_one_with_them() -> None:
         centre = (first.end + second.start) / 2
         assert min(abs(centre - middle) for middle in (3800.0, 12200.0, 20600.0)) < 25
     assert covered(same, runs, 500).holds
+
+
+def test_like_bars_that_would_pass_each_other_run_through() -> None:
+    """Into a support of 250 mm the bars go 150 mm: 25 mm past its axis, on the module 50 mm.
+
+    Of 5-25M and 4-25M the two in the corners run through anyhow, of the 3 and 2 others 2 do; the
+    third ends 50 mm past the axis. In supports of 400 mm they end 50 mm before it.
+    """
+    five, four = ((BarLayer(5, "25M"),), (BarLayer(4, "25M"),))
+    for width, expected in (
+        (250.0, [(2, -75.0, 10075.0), (1, -75.0, 5050.0)]),
+        (400.0, [(3, -150.0, 4950.0), (2, 5050.0, 10150.0)]),
+    ):
+        bare = beam_of((5000.0, 5000.0), ("elastic",) * 3, width=width, b_w=420.0)
+        bars = SectionBars((five, four), (TopBars((BarLayer(2, "25M"),)),) * 3, "15M")
+        none, cases = np.zeros(2), np.zeros(len(bare.forces.cases))
+        counts = TorsionForces(np.array([0.0, 5000.0]), none, none, (cases, cases), 1.0, 1.0)
+        designed = replace(bare, bars=bars, torsion={1: counts, 2: counts})
+        runs = lay_bottom(Frame.of(designed, 50))
+        inner = [(run.number, run.start, run.end) for run in runs[1:]]
+        assert sorted(inner) == sorted(expected)
+
+
+def test_no_holders_beside_top_bars_that_reach_the_end() -> None:
+    """Corner bars that stand to the end of the beam hold the stirrups themselves."""
+    designed = three_spans()
+    corners = {k: BarRun("top", 1, 2, "25M", 0.0, 0.0) for k in (1, 2, 3, 4)}
+    end = designed.outline.axes[-1] + 150.0
+    whole = {3: replace(corners[3], start=12000.0, end=end)}
+    made = with_holders(designed, whole)
+    assert [run.end for run in made if run.start >= 16800.0] == []
+    assert max(run.end for run in made) == end
 
 
 def test_ties_around_the_hooks() -> None:

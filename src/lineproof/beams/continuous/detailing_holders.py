@@ -70,17 +70,15 @@ def _outer(designed: Designed, span: int, near: End) -> float:
 
 
 def _between(designed: Designed, span: int, corners: dict[int, BarRun]) -> BarRun | None:
-    """Return the bars that hold the stirrups of a span; None where the top bars meet.
+    """Return the bars that hold the stirrups of a span; None where top bars stand all along.
 
     The bars of a support may reach past the next one, where that has none.
     """
     start, end = (_outer(designed, span, near) for near in SIDES)
-    left = max((run for k, run in corners.items() if k <= span), key=lambda r: r.end, default=None)
-    right = min(
-        (run for k, run in corners.items() if k > span), key=lambda r: r.start, default=None
-    )
-    left = left if left is not None and left.end > start else None
-    right = right if right is not None and right.start < end else None
+    before = [run for k, run in corners.items() if k <= span and run.end > start]
+    after = [run for k, run in corners.items() if k > span and run.start < end]
+    left = max(before, key=lambda run: run.end, default=None)
+    right = min(after, key=lambda run: run.start, default=None)
     laps = _holder_lap(designed, span, left), _holder_lap(designed, span, right)
     start, end = left.end if left else start, right.start if right else end
     least = 2 * max(laps) if left and right else 0.0
