@@ -15,7 +15,7 @@ from lineproof.beams.analysis.arrangements import Combination
 from lineproof.beams.analysis.model import Beam, Span, Support, UniformLoad
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.detailing_data import Designed
-from lineproof.beams.continuous.detailing_meeting import run_through
+from lineproof.beams.continuous.detailing_meeting import others_through
 from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.record import Record, recompute
@@ -118,7 +118,7 @@ def test_bars_of_two_supports_that_meet(designed: Designed) -> None:
         4: [corners, run(4, 3, 16000.0, 19000.0)],
     }
 
-    found = [(r.number, r.start, r.end, r.serves) for r in run_through(designed, rows)]
+    found = [(r.number, r.start, r.end, r.serves) for r in others_through(designed, rows)]
 
     assert sorted(found) == [
         (2, 6000.0, 10500.0, "support 2"),

@@ -7,10 +7,10 @@ left does alone, each at one place a side, unless they save little or must run i
 
 from __future__ import annotations
 
-import math
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
-from itertools import pairwise
+from itertools import groupby, pairwise
+from operator import itemgetter
 
 import numpy as np
 
@@ -44,6 +44,7 @@ from lineproof.beams.continuous.cutoff import (
     zones_at,
 )
 from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.detailing_through import run_through
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_between, split
 from lineproof.beams.continuous.layout import BarRun, Hook
@@ -91,42 +92,29 @@ def lay_bottom(frame: Frame) -> tuple[BarRun, ...]:
     places = designed.outline.axes[1:-1]
     quarters = [x for span in spans for x in _quarters(designed, span)]
     made = [piece for run in corners for piece in split(designed, run, places, quarters)]
-    for run in _one_past(designed, [row[1:] for row in rows]):
+    for run in _others_through(designed, [row[1:] for row in rows]):
         made += split(designed, run, places, quarters)
     return tuple(made)
 
 
-def _one_past(designed: Designed, rows: Sequence[Sequence[BarRun]]) -> list[BarRun]:
+def _others_through(designed: Designed, rows: Sequence[Sequence[BarRun]]) -> list[BarRun]:
     """Return the other bars of all spans; like ones that would pass each other run through.
 
     Over a support narrower than twice :data:`INTO_SUPPORT` the bars of both spans end beyond its
-    axis: side by side there would be more of them than fit into a layer. ``rows`` has an item a
-    span; where one span has more bars, the rest keep their own ends.
+    axis: side by side there would be more of them than fit into a layer. Where the soffit steps
+    each keep their ends. ``rows`` has an item a span.
     """
-    depths = designed.outline.depths
-    made: list[BarRun] = []
-    before: list[BarRun] = []
-    for row, (deep, h) in zip(rows, pairwise((math.nan, *depths)), strict=True):
-        now: list[BarRun] = []
-        for run in row:
-            rest = run
-            for place, earlier in enumerate(before):
-                number = min(earlier.number, rest.number)
-                if deep == h and number and _pass(earlier, rest):
-                    serves = _both(earlier, rest)
-                    now.append(replace(rest, number=number, start=earlier.start,
-                                       hook_start=earlier.hook_start, serves=serves))  # fmt: skip
-                    before[place] = replace(earlier, number=earlier.number - number)
-                    rest = replace(rest, number=rest.number - number)
-            now.append(rest)
-        made += before
-        before = now
-    return [run for run in (*made, *before) if run.number]
+    level = groupby(zip(designed.outline.depths, rows, strict=True), key=itemgetter(0))
+    return [
+        run
+        for _, spans in level
+        for run in run_through([row for _, row in spans], _pass, _both)
+    ]  # fmt: skip
 
 
 def _pass(first: BarRun, second: BarRun) -> bool:
-    """Tell whether like bars of two neighbouring spans overlap."""
-    return (first.size, first.layer) == (second.size, second.layer) and second.start < first.end
+    """Tell whether bars of two neighbouring spans overlap."""
+    return second.start < first.end
 
 
 def _quarters(designed: Designed, span: int) -> tuple[float, float]:

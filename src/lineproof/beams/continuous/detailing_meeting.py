@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
 from lineproof.beams.continuous.anchorage import (
     available,
@@ -14,6 +14,7 @@ from lineproof.beams.continuous.anchorage import (
 from lineproof.beams.continuous.cutoff import ceil50, far_face, half_of, support_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import serving
+from lineproof.beams.continuous.detailing_through import run_through
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length
 from lineproof.beams.continuous.layout import BarRun
@@ -84,40 +85,18 @@ def _anchors(designed: Designed, support: int, run: BarRun) -> bool:
     return has_hooks(designed) and fits_hook(designed, support, run.size, spread=spread)
 
 
-def run_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:
+def others_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:
     """Return the top bars besides the corner bars; like ones of two supports that meet are one.
 
     Common practice: in a short span, bars of both supports that would pass each other, or end
     within a lap of each other, run through. ``rows`` holds the bars of every support, the corner
-    bars first; where one support has more of them, the rest keep their own ends.
+    bars first.
     """
-    made: list[BarRun] = []
-    before: list[BarRun] = []
-    for support in sorted(rows):
-        now: list[BarRun] = []
-        for run in rows[support][1:]:
-            rest = run
-            for place, earlier in enumerate(before):
-                if rest.number and earlier.number and _meet(designed, earlier, rest):
-                    number = min(earlier.number, rest.number)
-                    now.append(_one(earlier, rest, number))
-                    before[place] = replace(earlier, number=earlier.number - number)
-                    rest = replace(rest, number=rest.number - number)
-            now.append(rest)
-        made += before
-        before = now
-    return [run for run in (*made, *before) if run.number]
 
+    def meet(first: BarRun, second: BarRun) -> bool:
+        return second.start - first.end < lap_length(designed, first)
 
-def _meet(designed: Designed, first: BarRun, second: BarRun) -> bool:
-    same = (first.size, first.layer, first.place) == (second.size, second.layer, second.place)
-    return same and second.start - first.end < lap_length(designed, first)
-
-
-def _one(first: BarRun, second: BarRun, number: int) -> BarRun:
-    """Return bars that go from the outer end of the first to that of the second."""
-    left, right = min(first, second, key=lambda r: r.start), max(first, second, key=lambda r: r.end)
-    return replace(
-        first, number=number, start=left.start, hook_start=left.hook_start, end=right.end,
-        hook_end=right.hook_end, serves=serving(first.serves, second.serves),
+    return run_through(
+        (rows[support][1:] for support in sorted(rows)), meet,
+        lambda first, second: serving(first.serves, second.serves),
     )  # fmt: skip

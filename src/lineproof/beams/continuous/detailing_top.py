@@ -38,7 +38,7 @@ from lineproof.beams.continuous.detailing_holders import holder, joined, with_ho
 from lineproof.beams.continuous.detailing_meeting import (
     Reach,
     furthest,
-    run_through,
+    others_through,
     to_the_end,
     with_restraint,
 )
@@ -93,7 +93,7 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
         _fill(frame, span, reaches)
     rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
     corners = {support: row[0] for support, row in rows.items() if row}
-    others = run_through(designed, rows)
+    others = others_through(designed, rows)
     string = joined(designed, with_holders(designed, corners))
     middles = [_middle(designed, span) for span in spans]
     return tuple(p for run in (*string, *others) for p in split(designed, run, middles))
@@ -108,7 +108,7 @@ def _fill(frame: Frame, span: int, reaches: dict[int, dict[End, Reach]]) -> None
     length = ceil50(designed.outline.lengths[span - 1])
     while meeting:
         rows = {s: _placed_all(designed, s, reaches[s]) for s, _ in ends}
-        runs = [*(row[0] for row in rows.values() if row), *run_through(designed, rows)]
+        runs = [*(row[0] for row in rows.values() if row), *others_through(designed, rows)]
         if worst_between(frame, stand(designed, runs), "top", span, bounds) <= MARGIN:
             return
         if all(reaches[s][e].short >= length for s, e in meeting):
