@@ -125,10 +125,10 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "hooks.TAIL_COVERED": ({"c_tail": 50}, {"c_tail": 49}),
     # 3*25.2 = 75.6
     "hooks.TIED": ({"s_tie": 75, "d_b": 25.2}, {"s_tie": 76, "d_b": 25.2}),
-    # 11.3 + 1.4 x 20 = 39.3
+    # 11.3 + max(1.4 x 11.3, 1.4 x 20, 30) = 41.3
     "hooks.TIES_CLEAR": (
         {"a_max": 20, "s_tie": 55, "d_bs": 11.3},
-        {"a_max": 20, "s_tie": 39, "d_bs": 11.3},
+        {"a_max": 20, "s_tie": 41, "d_bs": 11.3},
     ),
     "hooks.FITS": ({"l_dh": 298, "l_av": 340}, {"l_dh": 426, "l_av": 340}),
     "laps.LAPPABLE": ({"d_b": 35.7}, {"d_b": 43.7}),

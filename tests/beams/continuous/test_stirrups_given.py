@@ -8,9 +8,12 @@ from typing import Any
 import numpy as np
 import pytest
 
+from lineproof.beams.continuous.layout import StirrupZone, places_of
 from lineproof.beams.continuous.shear_numbers import ShearBasis
-from lineproof.beams.continuous.stirrups import first_distance, grid
+from lineproof.beams.continuous.stirrups import Band, first_distance, grid
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.beams.continuous.stirrups_given import SpanStirrups
+from lineproof.beams.continuous.stirrups_record import closest
 from lineproof.errors import UserError
 
 from .shear_models import BASIS, case_of, new_sheet, record, three_spans, uniform
@@ -155,3 +158,72 @@ def test_a_method_that_does_not_hold_is_refused(changes: dict[str, Any], said: s
     with pytest.raises(UserError) as caught:
         choose_stirrups(case.outline, case.forces, replace(BASIS, **changes), case.spans)
     assert said in str(caught.value)
+
+
+def placed(clear: float, *bands: Band) -> list[float]:
+    """Return where the stirrups of a span stand from its left face."""
+    one = StirrupZone(1, 0.0, 0.0, 1, 0.0, "10M")
+    zones = SpanStirrups(1, clear, bands).placed(0.0, one)
+    return [x for zone in zones for x in places_of(zone)]
+
+
+def test_a_closer_zone_moves_up_to_the_face_beside_wider_spaces() -> None:
+    """250 mm over 1.5 m at both ends of 6.85 m, 325 mm between: the same from either end.
+
+    From 75: 6 at 250 to 1325; 12 at 325 from 1650 to 5225; the last zone would start at 5475 and
+    end at 6725, 50 mm before the place of the last stirrup at 6850 - 75 = 6775: it moves there,
+    and leaves 5525 - 5225 = 300 mm, less than 325.
+    """
+    at = placed(6850.0, Band(0, 1500, 250), Band(1500, 5350, 325), Band(5350, 6850, 250))
+    assert at[:6] == [75.0, 325.0, 575.0, 825.0, 1075.0, 1325.0]
+    assert at[6] == 1650.0
+    assert at[17] == 5225.0
+    assert at[18:] == [5525.0, 5775.0, 6025.0, 6275.0, 6525.0, 6775.0]
+
+
+@pytest.mark.parametrize(
+    ("clear", "spacing", "first", "number", "last_space"),
+    [
+        # 5200 - 2 x 75 = 25 x 200 + 50: 90 mm are due, both ends move 20 mm to the faces.
+        (5200.0, 200.0, 55.0, 27, 90.0),
+        # 3040 - 2 x 50 = 29 x 100 + 40: both ends move 20 mm inward, to 70 mm from the faces.
+        (3040.0, 100.0, 70.0, 30, 100.0),
+        # 5250 - 2 x 75 = 25 x 200 + 100: wide enough for placing.
+        (5250.0, 200.0, 75.0, 27, 100.0),
+    ],
+)
+def test_two_stirrups_never_stand_too_close_at_the_right_face(
+    clear: float, spacing: float, first: float, number: int, last_space: float
+) -> None:
+    """75 + 11.3 = 86.3, on the module 90 mm."""
+    at = placed(clear, Band(0.0, clear, spacing))
+    assert (at[0], len(at), at[-1] - at[-2]) == (first, number, last_space)
+    assert at[-1] == clear - first
+
+
+def test_after_a_gap_the_stirrups_move_outward() -> None:
+    """From 2 m to the face at 4 m, 150 mm: 2000 - 75 = 12 x 150 + 125; at 160 mm 12 x 160 + 5.
+
+    Of the latter (90 - 5)/2 = 42.5 mm at either end.
+    """
+    gap = Band(0.0, 2000.0, np.inf)
+    at = placed(4000.0, gap, Band(2000.0, 4000.0, 150.0))
+    assert (at[0], at[-2], at[-1]) == (2000.0, 3800.0, 3925.0)
+    at = placed(4000.0, gap, Band(2000.0, 4000.0, 160.0))
+    assert (at[0], at[-2], at[-1]) == (1957.5, 3877.5, 3967.5)
+
+
+def test_the_closest_neighbours_are_checked() -> None:
+    """Stirrups at 0, 300, 600 and 700 mm: 100 mm. A tie 60 mm before the first one is closer.
+
+    Ties among themselves, 55 mm apart, are not stirrups: their clear distance is that of bars.
+    """
+    one = StirrupZone(1, 0.0, 600.0, 3, 300.0, "10M")
+    last = replace(one, start=700.0, end=700.0, number=1)
+    far, near = (
+        replace(one, start=x - 110.0, end=x, number=3, spacing=55.0) for x in (-150.0, -60.0)
+    )
+    assert closest((one, last), ()) == (100.0, 650.0)
+    assert closest((one, last), (far,)) == (100.0, 650.0)
+    assert closest((one, last), (near,)) == (60.0, -30.0)
+    assert closest((last,), ()) == (300.0, 700.0)

@@ -6,7 +6,7 @@ from collections.abc import Sequence
 
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
 from lineproof.beams.continuous.figure_rows import side_by_side
-from lineproof.beams.continuous.layout import StirrupZone
+from lineproof.beams.continuous.layout import StirrupZone, places_of
 from lineproof.drawing import MEDIUM, THIN, Line, Runs, Shape, Text
 from lineproof.drawing.axes import spread
 from lineproof.drawing.metrics import text_width
@@ -24,11 +24,11 @@ def stirrup_lines(view: View, zones: Sequence[StirrupZone]) -> list[Shape]:
     shapes: list[Shape] = []
     for zone in zones:
         depth = view.outline.depths[zone.span - 1]
-        step = (zone.end - zone.start) / max(zone.number - 1, 1)
-        for number in range(zone.number):
-            x = zone.start + number * step
-            if view.low <= x <= view.high:
-                shapes.append(Line((x, -cover), (x, cover - depth), "stirrups", THIN * 0.8))
+        shapes += [
+            Line((x, -cover), (x, cover - depth), "stirrups", THIN * 0.8)
+            for x in places_of(zone)
+            if view.low <= x <= view.high
+        ]
     return shapes
 
 

@@ -125,6 +125,12 @@ class StirrupZone:
     mark: str = ""
 
 
+def places_of(zone: StirrupZone) -> tuple[float, ...]:
+    """Return where the stirrups of a zone stand along the beam [mm]."""
+    step = (zone.end - zone.start) / max(zone.number - 1, 1)
+    return tuple(zone.start + number * step for number in range(zone.number))
+
+
 @dataclass(frozen=True, slots=True)
 class Detailing:
     """All bars and stirrups of a beam."""

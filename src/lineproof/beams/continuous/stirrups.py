@@ -148,17 +148,31 @@ def lay(
     middle = math.floor(between / spacing + _NEAR)
     if (left or right) and not middle:
         return None
-    rest = max(between - middle * spacing, 0.0)
-    least = _WHOLE * math.ceil((CLEAR_FOR_PLACING + d_bs) / _WHOLE - _NEAR)
-    if rest < _NEAR:
-        rest = 0.0
-    elif rest < least:
-        moved = rest / 2
-        if max(first, last) + moved > FROM_FACE:
-            moved = (rest - least) / 2
-        first, last, rest = first + moved, last + moved, max(rest - 2 * moved, 0.0)
-        rest = 0.0 if rest < _NEAR else rest
+    moved, rest = evened(first, last, max(between - middle * spacing, 0.0), d_bs)
+    first, last = first + moved, last + moved
     return SpanLayout(clear, end, spacing, left, middle, right, first, last, rest)
+
+
+def least_space(d_bs: float) -> float:
+    """Return the least distance of two stirrups, centre to centre, on the module [mm]."""
+    return _WHOLE * math.ceil((CLEAR_FOR_PLACING + d_bs) / _WHOLE - _NEAR)
+
+
+def evened(first: float, last: float, rest: float, d_bs: float) -> tuple[float, float]:
+    """Return how far the outer stirrups move from the faces, and the space that remains [mm].
+
+    ``rest`` is the space left over between stirrups at ``first`` and ``last`` from the faces. It
+    is closed by moving both inward, at most to :data:`FROM_FACE`; else both move outward until it
+    is wide enough for placing.
+    """
+    least = least_space(d_bs)
+    if rest < _NEAR or rest >= least:
+        return 0.0, 0.0 if rest < _NEAR else rest
+    moved = rest / 2
+    if max(first, last) + moved > FROM_FACE:
+        moved = (rest - least) / 2
+    left = max(rest - 2 * moved, 0.0)
+    return moved, 0.0 if left < _NEAR else left
 
 
 def changes(bands: Iterable[Band], h: float) -> Iterator[Change]:

@@ -14,10 +14,13 @@ from lineproof.beams.continuous.stirrups import (
     CLEAR_FOR_PLACING,
     FROM_FACE,
     Band,
+    evened,
     first_distance,
+    least_space,
 )
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo, read_quantity
+from lineproof.standards.a23_3.bars import BARS
 
 _KEYS = ("span", "from", "to", "spacing")
 _NEAR = 1e-6
@@ -36,13 +39,28 @@ class SpanStirrups:
         """Give the zones along the beam; ``face`` is the left face of the span.
 
         Between the outer stirrups of a zone stand whole spacings; at a face the first stirrup
-        stands half a spacing from it.
+        stands half a spacing from it. What remains before the right face takes one more stirrup
+        where it is wide enough for placing; else the zone moves up to the face beside wider
+        spaces, or the stirrups move by a few centimetres.
         """
+        rows, rest = self._rows()
+        for start, number, s in _evened(rows, rest, BARS.number(made_of.size, "d_b")):
+            last = start + (number - 1) * s
+            yield _placed(made_of, self.span, face, (start, last, number, s))
+
+    def _rows(self) -> tuple[list[list[_Row]], float]:
+        """Return first place, number and spacing of the zones, and what remains at the right.
+
+        Zones without a gap between them stand in one list.
+        """
+        groups: list[list[_Row]] = [[]]
         last: float | None = None
+        rest = 0.0
         for band in self.bands:
             s, start, end = band.spacing, band.start, band.end
             if math.isinf(s):
                 last = None
+                groups.append([])
                 continue
             if start == 0:
                 start = first_distance(s)
@@ -52,9 +70,36 @@ class SpanStirrups:
             number = math.floor((end - start) / s + _NEAR) + 1
             if number > 0:
                 last = start + (number - 1) * s
-                yield _placed(made_of, self.span, face, (start, last, number, s))
-            if band.end == self.clear and last is not None and end - last > _NEAR:
-                yield _placed(made_of, self.span, face, (end, end, 1, s))
+                groups[-1].append((start, number, s))
+            if band.end == self.clear and last is not None:
+                rest = max(end - last, 0.0)
+        return groups, rest
+
+
+_Row = tuple[float, int, float]
+"""Where the first stirrup of a zone stands from the left face, their number and spacing."""
+
+
+def _evened(groups: list[list[_Row]], rest: float, d_bs: float) -> Iterator[_Row]:
+    """Give the zones with the space at the right face closed, or wide enough for placing."""
+    for group in groups[:-1]:
+        yield from group
+    rows, least = groups[-1], least_space(d_bs)
+    if not rows or rest <= _NEAR:
+        yield from rows
+        return
+    start, number, s = rows[-1]
+    last = start + (number - 1) * s
+    if rest < least and len(rows) > 1 and rows[-2][2] >= s + rest - _NEAR:
+        yield from rows[:-1]
+        yield start + rest, number, s
+        return
+    whole = len(groups) == 1
+    first = rows[0][0] if whole else FROM_FACE  # a zone after a gap reaches no nearer to it
+    moved, left = evened(first, first_distance(s), rest, d_bs)
+    yield from ((x + moved, count, spacing) for x, count, spacing in rows)
+    if left:
+        yield last + moved + left, 1, s
 
 
 def _placed(

@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
+from itertools import pairwise
 
-from lineproof.beams.continuous.layout import BeamOutline, StirrupZone
+from lineproof.beams.continuous.layout import BeamOutline, StirrupZone, places_of
 from lineproof.beams.continuous.stirrups_choice import Choice
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY
@@ -16,6 +18,11 @@ _FIRST = (
     "Spacings are steps of 25 mm, at most one near the supports and one between, alike over the "
     "beam, then of least mass. Stirrups are nowhere below the minimum, also where the concrete "
     "alone would carry the shear."
+)
+_TIES = (
+    "The ties around the hooks in the end supports are no stirrups for shear; 12.5.4 asks them to "
+    "stand closer. Between them the least clear distance is that of bars; it is checked with the "
+    "hooks."
 )
 _GIVEN = "The stirrups are as given and checked as they stand."
 _STATIONS = (
@@ -34,10 +41,12 @@ _HOOKS_CLOSED = (
 )
 
 
-def record_stirrups(steps: Steps, choice: Choice, outline: BeamOutline) -> dict[str, Entry]:
+def record_stirrups(
+    steps: Steps, choice: Choice, outline: BeamOutline, ties: Sequence[StirrupZone] = ()
+) -> dict[str, Entry]:
     """Record inside the open part the stirrups of the beam; return A_v, A_t, d_bs for sections.
 
-    Needs b_w, f_c, f_y on the sheet.
+    ``ties`` are those around hooks in the end supports. Needs b_w, f_c, f_y on the sheet.
     """
     sheet, basis = steps.sheet, choice.basis
     made = {
@@ -57,10 +66,16 @@ def record_stirrups(steps: Steps, choice: Choice, outline: BeamOutline) -> dict[
         steps.check(shear_factors.GRADE_FOR_SIMPLIFIED)
         steps.check(shear_factors.CONCRETE_FOR_SIMPLIFIED)
     steps.line(shear.SPACING_MINIMUM)
-    spacings = [zone.spacing for zone in choice.zones]
-    if spacings:
-        s = sheet.given("s", f"{min(spacings):.12g} mm", "closest spacing of the stirrups")
+    if choice.zones:
+        apart, x = closest(choice.zones, ties)
+        source = f"the closest two neighbours as they stand, {x / 1000:.2f} m from support 1"
+        s = sheet.given("s", f"{apart:.9g} mm", source)
         steps.check(shear.CLEAR_SPACE, s=s)
+    if ties:
+        sheet.note(
+            "ties-closer", _TIES, title="Ties around hooks", clause="12.5.4",
+            basis=COMMON_PRACTICE,
+        )  # fmt: skip
     sheet.note(
         "stirrup-rules", _FIRST if choice.chosen else _GIVEN, title="Stirrups",
         basis=COMMON_PRACTICE,
@@ -71,6 +86,18 @@ def record_stirrups(steps: Steps, choice: Choice, outline: BeamOutline) -> dict[
         "stirrup-zones", columns, _rows(choice, outline), title="Stirrups and what governs them"
     )
     return made
+
+
+def closest(zones: Sequence[StirrupZone], ties: Sequence[StirrupZone]) -> tuple[float, float]:
+    """Return the least distance of a stirrup from its neighbour, and where it is [mm].
+
+    The neighbour is a stirrup or a tie. One stirrup alone has the spacing of its zone.
+    """
+    places = [(x, True) for zone in zones for x in places_of(zone)]
+    places += [(x, False) for zone in ties for x in places_of(zone)]
+    pairs = pairwise(sorted(places))
+    apart = [(other - x, (x + other) / 2) for (x, a), (other, b) in pairs if a or b]
+    return min(apart, default=(zones[0].spacing, zones[0].start))
 
 
 def _rows(choice: Choice, outline: BeamOutline) -> list[list[str]]:

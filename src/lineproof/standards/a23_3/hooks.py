@@ -147,12 +147,14 @@ TIED = _criterion(
     key="hook-ties",
 )
 TIES_CLEAR = _criterion(
-    "s_tie >= d_bs + 1.4*a_max",
+    "s_tie >= d_bs + max(1.4*d_bs, 1.4*a_max, 30)",
     clause="A23.1 6.6.5.2",
-    title="Clear space of the ties around hooks",
+    title="Clear distance of the ties around hooks, as between bars",
     basis=COMMON_PRACTICE,
+    numbers={"30": "mm"},
     yes="The concrete passes between the ties.",
-    no="The concrete does NOT pass between the ties: thicker bars or a smaller aggregate.",
+    no="The concrete does NOT pass between the ties: thicker bars, thinner ties or a smaller "
+    "aggregate.",
     key="hook-ties-clear",
 )
 FITS = _criterion(
