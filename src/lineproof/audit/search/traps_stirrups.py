@@ -97,17 +97,22 @@ def _open_stirrups(view: View) -> Iterator[Remark]:
             if at.get("Span") in spans and at.get("Form") == "open" and _within(view, at):
                 named = f"Span {at['Span']}: stirrups {at.get('Mark', '')}"
                 yield Remark(
-                    f"{named} from {at['From, mm']} mm are open although torsion counts",
+                    f"{named} from {_first(at)} mm are open although torsion counts",
                     "Closed stirrups with 135° hooks.",
                     clause="11.2.7",
                     ids=(str(table["id"]),),
                 )
 
 
+def _first(row: Mapping[str, str]) -> str:
+    """Return the place of the first stirrup; records made earlier call its column From."""
+    return next((row[name] for name in row if name.startswith(("First", "From"))), "")
+
+
 def _within(view: View, row: Mapping[str, str]) -> bool:
     """Tell whether stirrups stand in the clear span: ties around hooks lie in the support."""
     length = view.stored(view.part(f"span-{row['Span']}").get("l_n")) or float("inf")
-    start = row.get("From, mm", "")
+    start = _first(row)
     return start.isdigit() and float(start) <= length
 
 

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable, Mapping
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from decimal import Decimal
 
@@ -20,6 +20,7 @@ from lineproof.beams.continuous.anchorage import (
     in_overhang,
     room_beside,
     sides_of,
+    tie_spacing,
 )
 from lineproof.beams.continuous.beside import Row, crowded, layer_with, tightest
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
@@ -40,6 +41,12 @@ BY_GENERAL = "The development length is that of the general expression; the tabl
 
 _OUTSIDE = (
     "Top bars stand in the overhangs here, outside the stirrups: the factor for ties is not used."
+)
+TIED_IN_WEB = "Ties around the hooks within the web, of small cover where the beam ends"
+TIES_IN_JOINT = (
+    "The hooks of the bars in the overhangs stand outside the ties of the beam and are NOT tied "
+    "here: the design of what carries the beam must show ties around them in the joint, at most "
+    "{:g} mm apart."
 )
 _CLASS = "Both bars are spliced at one place: class B."
 _CLASS_UNLIKE = (
@@ -318,11 +325,17 @@ def _record_lap(
 
 
 def record_hook(
-    writers: Writers, place: Mapping[str, Entry], support: int, size: str, ties: float
+    writers: Writers,
+    place: Mapping[str, Entry],
+    support: int,
+    size: str,
+    ties: float,
+    bent: Sequence[BarRun] = (),
 ) -> dict[str, Entry]:
     """Record inside the open part the hook of a bar at an end of the beam, with its checks.
 
-    ``ties`` is the spacing at which ties are laid around all hooks of the support [mm].
+    ``ties`` is the spacing at which ties are laid around all hooks of the web at the support [mm];
+    ``bent`` are the bars of the size that are hooked there.
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     sheet, designed = writers.sheet, writers.designed
@@ -350,10 +363,20 @@ def record_hook(
     _record_hook_factors(steps, designed, reduced=reduced, tied=tied and not spread)
     steps.lines(basic, hooks.L_DH)
     if tied:
-        steps.bind(s_tie=sheet.given("s_tie", plain(ties, "mm"), source="as laid"))
-        steps.check(hooks.TIED)
-        steps.check(hooks.TIES_CLEAR, a_max=sheet.find("a_max"))
+        _record_ties(steps, ties, bent)
     return steps.place
+
+
+def _record_ties(steps: Steps, ties: float, bent: Sequence[BarRun]) -> None:
+    """Record the ties around hooks of the web; those of the overhangs are left to the joint."""
+    beside = any(run.place == "overhang" for run in bent)
+    if not beside or any(run.place == "web" for run in bent):
+        steps.bind(s_tie=steps.sheet.given("s_tie", plain(ties, "mm"), source="as laid"))
+        steps.check(hooks.TIED, title=TIED_IN_WEB if beside else "")
+        steps.check(hooks.TIES_CLEAR, a_max=steps.sheet.find("a_max"))
+    if beside:
+        text = TIES_IN_JOINT.format(tie_spacing(steps.entry("d_b").value))
+        steps.sheet.note("ties-in-joint", text, title="Hooks in the overhangs", clause="12.5.4")
 
 
 def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, tied: bool) -> None:

@@ -289,10 +289,10 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
         for size in sorted({run.size for run in runs if getattr(run, name)}):
             key = f"anchorage-end-{support}-hook-{size.lower()}"
             with sheet.part(key, f"Hooks of bars {size} at support {support}"):
-                place = record_hook(writers, {}, support, size, ties)
+                bent = [run for run in runs if run.size == size and getattr(run, name)]
+                place = record_hook(writers, {}, support, size, ties, bent)
                 made[support, size] = place["l_dh"]
                 if designed.held(support):
-                    bent = (run for run in runs if run.size == size and getattr(run, name))
                     beyond = _beyond(writers, support, bent)
                     _record_fit(writers, Steps(sheet, place), support, beyond)
     return made

@@ -40,7 +40,7 @@ def hook_ties(designed: Designed, runs: tuple[BarRun, ...]) -> tuple[StirrupZone
         made.append(
             StirrupZone(
                 span, start, start + reach, number, spacing, designed.basis.stirrups.size,
-                designed.basis.stirrups.legs,
+                designed.basis.stirrups.legs, around_hooks=True,
             )
         )  # fmt: skip
     return tuple(made)

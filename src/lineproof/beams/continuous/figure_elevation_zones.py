@@ -14,6 +14,7 @@ from lineproof.drawing.metrics import text_width
 SIZE = 2.3
 LINE, TICK = -2.0, 0.85
 APART = 1.4
+_TIES = "ties around hooks"
 FARTHEST = 6.0
 """How far a name may stand beside the middle of its zone."""
 
@@ -67,6 +68,8 @@ def _names(zone: StirrupZone) -> tuple[Runs, Runs]:
     """Two lines: number, size and spacing; mark and length."""
     mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
     length = f"{zone.end - zone.start:.0f}" if zone.number > 1 else ""
+    if zone.around_hooks:
+        length = f"{length} {_TIES}"
     return ((_count(zone), "roman"),), (*mark, (length, "roman"))
 
 
@@ -79,7 +82,8 @@ def _count(zone: StirrupZone) -> str:
 def _one_line(zone: StirrupZone) -> Runs:
     mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
     length = f" = {zone.end - zone.start:.0f}" if zone.number > 1 else ""
-    return (*mark, (f"{_count(zone)}{length}", "roman"))
+    ties = f", {_TIES}" if zone.around_hooks else ""
+    return (*mark, (f"{_count(zone)}{length}{ties}", "roman"))
 
 
 def _in_one_row(names: Sequence[tuple[Runs, Runs]], middles: Sequence[float]) -> list[float]:

@@ -111,7 +111,8 @@ class BarRun:
 class StirrupZone:
     """Stirrups at one spacing: the first stands at ``start``, the last at ``end``, along the beam.
 
-    ``closed`` stirrups are closed around all bars with 135 degree hooks, for torsion.
+    ``closed`` stirrups are closed around all bars with 135 degree hooks, for torsion; those
+    ``around_hooks`` are the ties of 12.5.4 in an end support, which carry no shear.
     """
 
     span: int
@@ -123,6 +124,7 @@ class StirrupZone:
     legs: int = 2
     closed: bool = False
     mark: str = ""
+    around_hooks: bool = False
 
 
 def places_of(zone: StirrupZone) -> tuple[float, ...]:

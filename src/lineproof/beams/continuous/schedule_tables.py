@@ -11,9 +11,9 @@ from lineproof.beams.continuous.schedule import BarItem, Schedule
 
 DASH = "–"
 STIRRUP_NOTE = (
-    "From and to: first and last stirrup, from the left end of the clear length of the span (the "
+    "First and last stirrup are measured from the left end of the clear length of the span (the "
     "right face of its left support, or the free end); ties around hooks within an end support lie "
-    "outside that length. Sizes are outside to outside, width × "
+    "outside that length and are no hanger stirrups. Sizes are outside to outside, width × "
     "height; open stirrups have 90° hooks turned inward, closed ones 135° hooks at one corner."
 )
 
@@ -50,8 +50,8 @@ def _bar_row(item: BarItem) -> tuple[str, ...]:
 def stirrup_table(bars: Schedule) -> PrintedTable:
     """Return the stirrups by span and zone, distances from the left end of the clear length."""
     columns = (
-        "Span", "Mark", "Stirrups", "Legs", "Spacing, mm", "Number", "From, mm", "To, mm", "Form",
-        "Outside, mm", "Cut length, mm", "kg",
+        "Span", "Mark", "Stirrups", "Legs", "Spacing, mm", "Number", "First, mm from left face",
+        "Last, mm from left face", "Form", "Outside, mm", "Cut length, mm", "kg",
     )  # fmt: skip
     rows: list[tuple[str, ...]] = []
     for each in bars.sets:
@@ -59,7 +59,7 @@ def stirrup_table(bars: Schedule) -> PrintedTable:
         rows.append((
             str(zone.span), zone.mark, zone.size, str(zone.legs), _spacing(zone),
             str(zone.number), f"{each.first:.0f}", f"{each.last:.0f}",
-            "closed" if zone.closed else "open",
+            _form(zone),
             " + ".join(_outside(shape) for shape, _ in each.pieces),
             " + ".join(f"{_times(count)}{shape.cut:.0f}" for shape, count in each.pieces),
             f"{each.mass:.1f}",
@@ -67,6 +67,11 @@ def stirrup_table(bars: Schedule) -> PrintedTable:
     if not rows:
         rows.append((DASH, DASH, "none", *[DASH] * (len(columns) - 3)))
     return PrintedTable("Stirrup schedule", columns, tuple(rows))
+
+
+def _form(zone: StirrupZone) -> str:
+    form = "closed" if zone.closed else "open"
+    return f"{form}, ties around hooks" if zone.around_hooks else form
 
 
 def _times(count: int) -> str:

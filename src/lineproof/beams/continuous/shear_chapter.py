@@ -83,7 +83,7 @@ def record_shear(design: Design) -> None:
     model, choice = design.model, design.stirrups
     sheet = model.sheet
     with sheet.part(STIRRUPS, "Stirrups"):
-        ties = [zone for zone in design.detailing.stirrups if zone not in choice.zones]
+        ties = [zone for zone in design.detailing.stirrups if zone.around_hooks]
         alike = record_stirrups(Steps(sheet, {}), choice, design.outline, ties)
         if design.raised and not design.designed.torsion:
             text = f"{MORE_BARS.format('; '.join(design.raised))} {AT_GIRDER}"

@@ -26,6 +26,10 @@ from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
 from lineproof.beams.continuous.model import LOADS, Model
 from lineproof.beams.continuous.resistance import provide
 from lineproof.beams.continuous.resistance_demand import stretches_at
+from lineproof.beams.continuous.summary_supports import COLUMNS as FOR_COLUMNS
+from lineproof.beams.continuous.summary_supports import TITLE as FOR_SUPPORTS
+from lineproof.beams.continuous.summary_supports import WIDTHS as FOR_WIDTHS
+from lineproof.beams.continuous.summary_supports import support_rows
 from lineproof.beams.continuous.summary_tables import (
     FLEXURE,
     FLEXURE_WIDTHS,
@@ -82,6 +86,10 @@ def record_summary(design: Design, cures: Found) -> None:
             _table(sheet, "failing", FAILING, FAILING_COLUMNS, fails, FAILS, widths=FAILING_WIDTHS)
         for number, (key, title, columns, widths, rows) in enumerate(_tables(design)):
             _table(sheet, key, title, columns, rows, TABLES + number, widths=widths)
+        asked = list(support_rows(design))
+        if asked:
+            _table(sheet, "for-supports", FOR_SUPPORTS, FOR_COLUMNS, asked, DRAWN + 2,
+                   widths=FOR_WIDTHS)  # fmt: skip
         _record_loads(model)
         columns, rows = reaction_table(model)
         title = "Reactions, unfactored, by load type"
