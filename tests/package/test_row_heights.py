@@ -83,3 +83,33 @@ def test_a_table_in_the_working_leaves_the_clauses_their_column() -> None:
 
     assert table_heights(table, "10", working=False) == "1"
     assert table_heights(table, "10", working=True) == "0"
+
+
+def test_an_index_stays_within_its_row() -> None:
+    """Typst's own measure of what an index with tails reaches below its line: room for it."""
+    template = (folder("templates") / "package.typ").read_text()
+    told = next(line for line in template.splitlines() if line.startswith("#let below-index"))
+    check = (
+        'let high(it) = measure(text(top-edge: "bounds", bottom-edge: "bounds", it)).height\n'
+        'let drop = high($M_upright("lay,j")$) - high($M$)\n'
+        "assert(drop > 3pt and drop + 1pt < below-index.to-absolute())"
+    )
+    source = f"{SETUP}{told}\n#context {{ {check} }}"
+
+    assert compile_pdf(source, "[]", DATE).startswith(b"%PDF")
+
+
+def test_a_mark_above_an_index_stands_beside_its_letter() -> None:
+    """As high as the same symbol written in Typst's own way, which sets the minus beside the M."""
+    formula = [["letter", "M"], ["word", "cr"], ["word", "−"], ["scripts", 0, 1, 2]]
+    maths = (folder("templates") / "maths.typ").read_text()
+    setup = SETUP.replace("#let t = json(bytes(sys.inputs.texts))\n", "")
+    check = (
+        'let high(it) = measure(text(top-edge: "bounds", bottom-edge: "bounds", it)).height\n'
+        'let typed = $M_upright("cr")^upright("−")$\n'
+        "assert(calc.abs(high(t.x4) - high(typed)) < 0.01pt)"
+    )
+    source = f"{setup}{maths}\n#context {{ {check} }}"
+
+    texts = json.dumps([*formula, ["formula", 3, "moment"]])
+    assert compile_pdf(source, texts, DATE).startswith(b"%PDF")
