@@ -9,6 +9,7 @@ import ast
 import math
 import operator
 from collections.abc import Callable, Iterator, Mapping
+from decimal import ROUND_HALF_UP, Decimal
 from fractions import Fraction
 from typing import Any
 
@@ -145,6 +146,20 @@ def _comparison(place: str, test: Mapping[str, Any], system: str) -> Iterator[st
         ratio = (float(printed["utilisation"]) <= 1) == test["holds"]
         if not ratio and float(printed["utilisation"]) != 1:
             yield f"{place}: utilisation {printed['utilisation']} against {test['holds']}"
+        yield from _ratio(place, test)
+
+
+def _ratio(place: str, test: Mapping[str, Any]) -> Iterator[str]:
+    """Divide the printed sides: the printed ratio, rounded half up, comes out."""
+    printed = test["printed"]
+    demand, resistance = Decimal(printed["left"]), Decimal(printed["right"])
+    if ">" in test["formula"]:
+        demand, resistance = resistance, demand
+    if resistance:
+        shown = Decimal(printed["utilisation"])
+        again = (demand / resistance).quantize(shown, rounding=ROUND_HALF_UP)
+        if again != shown:
+            yield f"{place}: {demand}/{resistance} is {again}, not {shown}"
 
 
 def _between(formula: str, printed: Mapping[str, str]) -> str:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable
-from decimal import Decimal
+from decimal import ROUND_HALF_UP, Decimal
 from typing import Any
 
 import pytest
@@ -209,7 +209,66 @@ def test_utilisation_only_where_it_says_something() -> None:
             sheet.check(text, key=key)
     entries = sheet.close().entries
     assert [entries[f"p/{k}"]["utilisation"] for k in "znrg"] == [0.0, None, None, 1.0]
-    assert entries["p/z"]["printed"]["utilisation"] == "0"
+    assert entries["p/z"]["printed"]["utilisation"] == "0.00"
+
+
+@settings(max_examples=60, deadline=None)
+@given(
+    st.floats(1.0, 9e5), st.floats(0.0, 30.0),
+    st.sampled_from(["M <= R", "M < R", "R >= M", "2*M <= R", "M/R <= 1"]),
+)  # fmt: skip
+def test_a_printed_ratio_is_that_of_the_printed_sides(R: float, share: float, text: str) -> None:
+    """Divided as decimals, and rounded half up to the digits that the ratio shows."""
+    sheet = Sheet("B1")
+    with sheet.part("p", "P"):
+        sheet.given("k", f"{share:.15f}")
+        sheet.given("R_0", f"{R:.12e} kN")
+        sheet.line("R = 1*R_0", unit="kN")
+        sheet.line("M = k*R", unit="kN")
+        sheet.check(text, key="t", unit="" if "/" in text else "kN")
+    record = sheet.close()
+    printed = record.entries["p/t"]["printed"]
+    demand, resistance = Decimal(printed["left"]), Decimal(printed["right"])
+    if ">" in text:
+        demand, resistance = resistance, demand
+    shown = Decimal(printed["utilisation"])
+    again = (demand / resistance).quantize(shown, rounding=ROUND_HALF_UP)
+    assert again == shown
+    assert recompute(record) == []
+
+
+def test_a_side_gets_the_digit_that_its_ratio_needs() -> None:
+    """115.44/115.50 = 0.9995, and 126.4/152.8 = 0.827; 115/116 = 0.991 and 126/153 = 0.824.
+
+    Rounding 115.50 to 116 moves more than 115.44 to 115: 115/115.5 = 0.9957 prints as 1.00. Of the
+    others 126.4 moves more: 126.4/153 = 0.826 prints as 0.83.
+    """
+    sheet = Sheet("B1")
+    with sheet.part("p", "P"):
+        for name, typed in (("a", 115.44), ("b", 115.50), ("c", 126.4), ("d", 152.8)):
+            sheet.given(f"{name}_0", f"{typed} mm")
+            sheet.line(f"{name} = 1*{name}_0", unit="mm")
+        sheet.check("a <= b", key="near")
+        sheet.check("c <= d", key="far")
+    entries = sheet.close().entries
+    near, far = entries["p/near"]["printed"], entries["p/far"]["printed"]
+    assert (near["left"], near["right"], near["utilisation"]) == ("115", "115.5", "1.00")
+    assert (far["left"], far["right"], far["utilisation"]) == ("126.4", "153", "0.83")
+    # The value shows that digit at its own line, too.
+    assert entries["p/c"]["printed"]["result"] == "126.4"
+
+
+def test_a_ratio_of_an_older_record_is_still_read() -> None:
+    """Three digits, as ratios once had: 4/7 = 0.5714."""
+    sheet = Sheet("B1")
+    with sheet.part("p", "P"):
+        sheet.given("a", "4 kN")
+        sheet.given("b", "7 kN")
+        sheet.check("a <= b", key="t")
+    data = sheet.close().data
+    for text, differs in (("0.571", False), ("0.572", True)):
+        data["parts"][0]["entries"][2]["printed"]["utilisation"] = text
+        assert bool(recompute(Record.from_data(data))) is differs
 
 
 def test_the_sample_by_hand(sample: Record) -> None:
@@ -227,10 +286,10 @@ def test_the_sample_by_hand(sample: Record) -> None:
     assert resistance["value"] == pytest.approx(546.3528, rel=1e-12)
     assert resistance["printed"]["result"] == "546"
     assert resistance["printed"]["args"] == {"A_s": "3000", "f_y": "400", "d": "548.6", "a": "26"}
-    # 298.186/546.3528 = 0.54578
+    # 298.186/546.3528 = 0.54578, and of the printed sides 298/546 = 0.54579
     check = entries["flexure/M_f_at_most_M_r"]
     assert check["utilisation"] == pytest.approx(0.545775, rel=1e-5)
-    assert check["printed"]["utilisation"] == "0.546"
+    assert check["printed"]["utilisation"] == "0.55"
     assert check["conclusion"] == "Enough."
     assert entries["flexure/half"]["exception"] == {"reason": "temporary", "initials": "A.B."}
     assert sample.failed == ["flexure/half"]

@@ -24,6 +24,7 @@ from lineproof.record.entry import (
     digest_of,
     rested_on,
 )
+from lineproof.record.utilisation import ratio_of_texts
 
 _MOST_KEPT = 8192
 """Printed numbers that are kept as read: the same ones stand in many lines."""
@@ -113,8 +114,16 @@ def printed_utilisation(entry: Data, ratio: float | None) -> Iterator[Finding]:
         yield "utilisation", str(stored), again
     elif stored is not None and ratio is not None:
         text = entry["printed"]["utilisation"]
-        if abs(stored - ratio) > 1e-9 * abs(ratio) or not rounds_to(text, ratio):
+        agrees = rounds_to(text, ratio) or _ratio_of_sides(entry, text)
+        if abs(stored - ratio) > 1e-9 * abs(ratio) or not agrees:
             yield "utilisation", f"{stored:.10g} ({text})", again
+
+
+def _ratio_of_sides(test: Data, text: str) -> bool:
+    """Tell whether a printed ratio is that of the printed sides, as of a residual cut short."""
+    sign = parse_criterion(test["formula"])[1]
+    left, right = test["printed"]["left"], test["printed"]["right"]
+    return ratio_of_texts(sign, left, right, -len(text.partition(".")[2])) == text
 
 
 def digests(entries: Mapping[str, Data]) -> dict[str, str]:

@@ -26,10 +26,10 @@ from lineproof.quantity.units import (
     power_of_ten,
     system_unit,
 )
-from lineproof.record.entry import CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES, Entry
+from lineproof.record.entry import CHECK, CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES, Entry
 from lineproof.record.standing import Standing, exact_decimal
 from lineproof.record.truth import in_unit, true_substitution, truthful
-from lineproof.record.utilisation import printed_ratio, ratio, utilisation
+from lineproof.record.utilisation import printed_ratio, ratio, sides_for_ratio, utilisation
 
 __all__ = ["Printer", "exact_decimal", "in_unit", "ratio", "utilisation"]
 
@@ -97,7 +97,9 @@ class Printer:
         made = self.comparison(entry)
         if utilisation is None:
             return made
-        return made | {"utilisation": printed_ratio(utilisation, holds=bool(entry))}
+        sign, left, right = entry.source.sign, made["left"], made["right"]
+        text = printed_ratio(utilisation, sign, left, right, holds=bool(entry))
+        return made | {"utilisation": text}
 
     # -- passes ------------------------------------------------------------------------------
 
@@ -224,6 +226,8 @@ class Printer:
             for place, (value, other) in enumerate(zip(sides, reversed(sides), strict=True))
         ]
         needed = truthful(test, sides, [c.result for c in chosen], holds=holds)
+        if one.entry.kind == CHECK:
+            needed = sides_for_ratio(test.sign, test.unit, sides, needed, holds=holds)
         chosen = [
             c if n == c.result else self._side(place, test, args, arguments, value, needed=n)
             for place, (value, c, n) in enumerate(zip(sides, chosen, needed, strict=True))

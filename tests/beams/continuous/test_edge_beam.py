@@ -5,6 +5,7 @@ from __future__ import annotations
 import ast
 import json
 import math
+from decimal import ROUND_HALF_UP, Decimal
 from pathlib import Path
 from typing import Any
 
@@ -273,3 +274,22 @@ def test_summary_has_a_row_of_torsion_for_every_section(
     counting = [row for row in table["rows"] if row[4] != "0"]
     assert len(counting) == len(turned_sections(design))
     assert not any("FAILS" in cell for row in table["rows"] for cell in row)
+
+
+@pytest.mark.parametrize(
+    ("table", "demand", "resistance"),
+    [("flexure", 2, 6), ("shear", 3, 6), ("service", 2, 3)],
+)
+def test_ratios_of_the_summary_are_those_of_its_columns(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    table: str,
+    demand: int,
+    resistance: int,
+) -> None:
+    """Divided with a pocket calculator, rounded half up to two decimals."""
+    rows = [r for r in edge_beam[2].entries[f"summary/{table}"]["rows"] if r[-1]]
+    assert len(rows) >= 6
+    for row in rows:
+        numbers = [Decimal(row[at].partition(" ")[0]) for at in (demand, resistance)]
+        ratio = (numbers[0] / numbers[1]).quantize(Decimal("0.01"), rounding=ROUND_HALF_UP)
+        assert str(ratio) == row[-1], row

@@ -25,6 +25,7 @@ from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.record import Entry
 from lineproof.record.printing import in_unit, utilisation
+from lineproof.record.utilisation import printed_ratio, sides_for_ratio
 from lineproof.standards.a23_3 import crack_control, deflection_stages, flexure, minimum, shear
 
 FLEXURE = ["Place", "Load case", "M_f, kN.m", "A_sr, mm2", "Bars", "A_s, mm2", "M_r, kN.m", "Ratio"]
@@ -33,6 +34,8 @@ SHEAR = ["Place", "Load case", "Stirrups", "V_f, kN", "V_c, kN", "V_s, kN", "V_r
 SHEAR_WIDTHS = (26.0, 46.0, 24.0, 14.0, 14.0, 14.0, 14.0, 0.0)
 SERVICE = ["Place", "Check", "Demand", "Limit", "Ratio"]
 PAIR = 2
+_DIGITS = 3
+"""Digits that a value of a summary shows at least."""
 SERVICE_WIDTHS = (40.0, 62.0, 24.0, 24.0, 14.0)
 
 
@@ -52,18 +55,30 @@ def short_case(case: object) -> str:
     return text
 
 
-def printed(value: float, unit: str, digits: int = 3) -> str:
+def printed(value: float, unit: str, digits: int = _DIGITS) -> str:
     """Return a value as a summary prints it."""
     return in_unit(value, unit, digits)
 
 
 def ratio_text(check: Entry) -> str:
     """Return the utilisation of a check, FAILS where it does not hold."""
+    return _ratio_of(check, *printed_sides(check, check.source.unit))
+
+
+def printed_sides(check: Entry, unit: str) -> tuple[str, str]:
+    """Return demand and resistance of a check, with the digits that its ratio needs."""
+    sides, sign = check.value, check.source.sign
+    digits = sides_for_ratio(sign, unit, sides, [_DIGITS, _DIGITS], holds=bool(check))
+    left, right = (printed(side, unit, n) for side, n in zip(sides, digits, strict=True))
+    return (right, left) if sign in (">=", ">") else (left, right)
+
+
+def _ratio_of(check: Entry, demand: str, resistance: str) -> str:
     used = utilisation(check)
-    shown = "" if used is None else f"{used:.2f}"
-    if check:
-        return shown if used is None or float(shown) <= 1 else f"{used:.3f}"
-    return f"{shown} FAILS".strip()
+    shown = ""
+    if used is not None:
+        shown = printed_ratio(used, "<=", demand, resistance, holds=bool(check))
+    return shown if check else f"{shown} FAILS".strip()
 
 
 def flexure_rows(design: Design) -> Iterator[Row]:
@@ -125,9 +140,10 @@ def _moment_row(
 ) -> Row:
     check = own[flexure.STRENGTH.key]
     needed = own["A_sr"] if "A_sr" in own else bars["A_sr"]
+    M_f, M_r = printed_sides(check, "kN.m")
     cells = (
-        name, case, printed(own["M_f"].value, "kN.m"), printed(needed.value, "mm2"), text,
-        printed(bars["A_s"].value, "mm2"), printed(bars["M_r"].value, "kN.m"), ratio_text(check),
+        name, case, M_f, printed(needed.value, "mm2"), text,
+        printed(bars["A_s"].value, "mm2"), M_r, _ratio_of(check, M_f, M_r),
     )  # fmt: skip
     return Row(cells, check)
 
@@ -146,7 +162,10 @@ def shear_rows(design: Design) -> Iterator[Row]:
         entries = sheet.entries_of(section.key)
         check = entries.get(shear.STRENGTH.key)
         forces = ("V_f", "V_c", "V_s", "V_r")
-        values = [printed(entries[n].value, "kN") if n in entries else "" for n in forces]
+        shown = {n: printed(entries[n].value, "kN") for n in forces if n in entries}
+        if check is not None:
+            shown["V_f"], shown["V_r"] = printed_sides(check, "kN")
+        values = [shown.get(n, "") for n in forces]
         place = place_of(section)
         basis = design.stirrups.basis
         legs = "" if basis.legs == PAIR else f"{basis.legs} legs "
@@ -182,12 +201,10 @@ def _checks(place: str, entries: Mapping[str, Entry]) -> Iterator[Row]:
 
 
 def _check_row(place: str, check: Entry, unit: str) -> Row:
-    left, right = check.value
-    if check.source.sign in (">=", ">"):
-        left, right = right, left
-    shown = tuple(f"{printed(side, unit)} {unit_word(unit)}".strip() for side in (left, right))
+    sides = printed_sides(check, unit)
+    shown = tuple(f"{side} {unit_word(unit)}".strip() for side in sides)
     title = (check.extra or {}).get("title") or check.source.title
-    return Row((place, title, *shown, ratio_text(check)), check)
+    return Row((place, title, *shown, _ratio_of(check, *sides)), check)
 
 
 def unit_word(unit: str) -> str:
