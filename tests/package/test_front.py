@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import copy
 import io
 import re
 from typing import Any
@@ -107,6 +108,22 @@ def test_checks_are_one_row_a_part(holding: Record, failing: Record) -> None:
     assert [p.governing.utilisation for p in good.part_summaries] == pytest.approx(ratios)
     assert [p.failed for p in bad.part_summaries] == [0, 1, 0]
     assert (good.failing, [row.group for row in bad.failing]) == ((), ["Flexure, span 2"])
+
+
+def test_parts_of_one_title_have_a_row_each_and_proofs_are_told(holding: Record) -> None:
+    """Three parts of one title, the last check a proof: two rows of one check, and a sentence."""
+    made = copy.deepcopy(holding)
+    parts = [part for part in made["parts"] if part["title"].startswith("Flexure, span")]
+    for part in parts:
+        part["title"] = "Flexure"
+    next(e for e in parts[2]["entries"] if e["kind"] == "check")["proof"] = True
+    package = build_package([made])
+    (calc,) = package.calcs
+    assert [(p.group, p.count) for p in calc.part_summaries] == [("Flexure", 1)] * 2
+    assert (len(calc.summary), calc.proofs) == (2, 1)
+    told = "One line that proves the calculation itself holds as well; it is not counted here."
+    assert told in to_html(package)
+    assert told in " ".join(" ".join(pages(to_pdf(package))).split())
 
 
 def test_the_check_nearest_its_limit_stands_for_its_part(record: Record) -> None:

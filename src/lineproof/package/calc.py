@@ -50,7 +50,7 @@ class NotCovered:
 
 @dataclass(frozen=True, slots=True)
 class Calc:
-    """One calculation of the package."""
+    """One calculation of the package; ``proofs`` that hold are no checks of the beam."""
 
     id: str
     title: str
@@ -70,6 +70,7 @@ class Calc:
     marks: Mapping[str, tuple[str, ...]]
     statements: tuple[str, ...]
     front: tuple[PrintedRow, ...] = ()
+    proofs: int = 0
 
     @property
     def failing(self) -> tuple[SummaryRow, ...]:

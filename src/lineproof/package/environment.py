@@ -219,6 +219,7 @@ def _filters() -> dict[str, Any]:
         "yes_no": lambda truth: "yes" if truth else "no",
         "verdict": _verdict,
         "checks_text": _checks_text,
+        "proofs_text": _proofs_text,
         "length_class": _length_class,
         "fails": fails,
         "short_cells": _short_cells,
@@ -304,3 +305,13 @@ def _css_text(text: str) -> str:
 def font_data(name: str) -> str:
     """Return a font file of the templates as base64 text."""
     return base64.b64encode((folder("templates") / "fonts" / name).read_bytes()).decode("ascii")
+
+
+def _proofs_text(calc: Calc) -> str:
+    """Say which lines that print a verdict are not among the checks."""
+    if calc.proofs == 1:
+        return "One line that proves the calculation itself holds as well; it is not counted here."
+    return (
+        f"{calc.proofs} lines that prove the calculation itself hold as well; "
+        "they are not counted here."
+    )

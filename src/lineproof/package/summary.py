@@ -21,7 +21,7 @@ _LONGEST_SYMBOL = 24
 
 @dataclass(frozen=True, slots=True)
 class SummaryRow:
-    """A check on the summary page."""
+    """A check on the summary page; ``part`` is the key of its part, ``group`` the title."""
 
     anchor: str
     label: str
@@ -33,6 +33,7 @@ class SummaryRow:
     verdict: str
     holds: bool
     group: str
+    part: str
     utilisation: float | None = None
     leads: bool = False
 
@@ -104,10 +105,10 @@ def summary_rows(
 
     A proof of the calculation itself (two paths agree) that holds is not a check of the beam.
     """
-    entries = [(part["title"], entry) for part in parts for entry in part["entries"]]
+    entries = [(part, entry) for part in parts for entry in part["entries"]]
     made = []
-    for group, entry in entries:
-        if entry["kind"] != "check" or (entry.get("proof") and entry["holds"]):
+    for part, entry in entries:
+        if entry["kind"] != "check" or is_proof_that_holds(entry):
             continue
         printed = rows[entry["id"]]
         demand, resistance = _sides(entry, notation)
@@ -122,7 +123,8 @@ def summary_rows(
                 ratio=printed.ratio,
                 verdict=printed.verdict,
                 holds=printed.holds,
-                group=group,
+                group=part["title"],
+                part=part["key"],
                 utilisation=entry.get("utilisation"),
                 leads=bool(entry.get("leads")),
             )
@@ -130,14 +132,19 @@ def summary_rows(
     return tuple(made)
 
 
+def is_proof_that_holds(entry: Mapping[str, Any]) -> bool:
+    """Tell whether an entry is a proof of the calculation itself, and no check of the beam."""
+    return bool(entry["kind"] == "check" and entry.get("proof") and entry["holds"])
+
+
 def part_summaries(rows: Sequence[SummaryRow]) -> tuple[PartSummary, ...]:
     """Return one row for the checks of each part, in the order of the parts."""
     made = []
-    for group, found in groupby(rows, key=lambda row: row.group):
+    for _, found in groupby(rows, key=lambda row: row.part):  # titles may be the same
         checks = list(found)
         failed = [row for row in checks if not row.holds]
         governing = max(failed or checks, key=_nearness)
-        made.append(PartSummary(group, len(checks), len(failed), governing))
+        made.append(PartSummary(checks[0].group, len(checks), len(failed), governing))
     return tuple(made)
 
 
