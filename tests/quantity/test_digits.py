@@ -106,3 +106,16 @@ def test_an_argument_that_cannot_be_computed_when_rounded_gains_digits() -> None
         lambda x, y: math.sqrt(x - y), [Argument(a, 3), Argument(b, 3)], math.sqrt(a - b), ""
     )
     assert min(chosen.args) >= 5
+
+
+def test_half_way_a_result_gains_a_digit_before_it_loses_one() -> None:
+    """218.62449 - 40.55241 x 0.225 = 209.5002 rounds to 210, but six digits give 209.4997.
+
+    No six digits give 210, and 2.1e2 would say less than is known: 209.5 is what both give.
+    """
+    V, w, x = Argument(218.62449, 6), Argument(40.55241, 6), Argument(0.225, 3, 0.225)
+    value = 218.62449 - 40.55241 * 0.225
+    assert round(218.624 - 40.5524 * 0.225, 4) == 209.4997
+    chosen = choose_digits(lambda V, w, x: V - w * x, (V, w, x), value, "kN")
+    assert chosen.result == 4
+    assert rounded_text(value, chosen.result) == "209.5"

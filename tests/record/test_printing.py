@@ -258,6 +258,26 @@ def test_a_side_gets_the_digit_that_its_ratio_needs() -> None:
     assert entries["p/c"]["printed"]["result"] == "126.4"
 
 
+def test_a_value_shows_at_its_own_line_what_a_later_line_uses() -> None:
+    """b_f = 380 + 1900/3 = 1013.33...; A = 380 x 620 + 633.33... x 140 = 324 266.67 mm2.
+
+    A - 324 000 = 267 needs A = 324 267, and that needs more than the six digits of 1013.33:
+    235 600 + (1013.33 - 380) x 140 = 324 266.2, but with 1013.333 it is 324 266.62.
+    """
+    sheet = Sheet("B1")
+    with sheet.part("p", "P"):
+        for name, typed in (("b_w", "380 mm"), ("h", "620 mm"), ("h_f", "140 mm"),
+                            ("c", "1900 mm"), ("A_0", "324000 mm2")):  # fmt: skip
+            sheet.given(name, typed)
+        sheet.line("b_f = b_w + c/3", unit="mm")
+        sheet.line("A = b_w*h + (b_f - b_w)*h_f", unit="mm2")
+        sheet.line("y = A - A_0", unit="mm2")
+    printed = {key: entry["printed"] for key, entry in sheet.close().entries.items()}
+    assert printed["p/y"]["args"] == {"A": "324267", "A_0": "324000"}
+    assert printed["p/A"]["result"] == "324267"
+    assert printed["p/A"]["args"]["b_f"] == printed["p/b_f"]["result"] == "1013.333"
+
+
 def test_a_ratio_of_an_older_record_is_still_read() -> None:
     """Three digits, as ratios once had: 4/7 = 0.5714."""
     sheet = Sheet("B1")

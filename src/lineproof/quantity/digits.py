@@ -21,6 +21,8 @@ from lineproof.quantity.quick_digits import (
 
 START_DIGITS = FEW_DIGITS
 MOST_DIGITS = 6
+MOST_WANTED = 8
+"""Digits that a value shows at most for the sake of the lines that use it."""
 ALL_DIGITS = 17
 """Digits that tell any two floats apart."""
 MOST_DECIMALS = 4
@@ -166,21 +168,25 @@ def choose_digits(
 
     Each number starts short. While the function of the printed arguments does not round to the
     printed result, the argument whose rounding moves the result most gains a digit, to six at
-    most; only when none is left does the result give one up. A result that is nothing but the
+    most; only when none is left, and one digit more does not help (half way between two numbers),
+    does the result give one up. A result that is nothing but the
     difference of roundings prints as 0.00; only where even that misses, or where the result must
     show ``needed`` digits, do arguments go beyond six.
     ``decimals`` asks for a result to so many decimals instead of significant digits;
-    ``wanted`` asks for more digits than the start, as far as they can be had.
+    ``wanted`` asks for more digits than the start, for which arguments go to eight.
     """
-    first = max(start_digits(result, unit), needed, min(wanted, MOST_DIGITS))
+    start = max(start_digits(result, unit), needed)
+    first = max(start, min(wanted, MOST_WANTED))
     substituted = _Substituted(function, args, result)
     plain = decimals is None or bool(needed)
     if plain and substituted.gives(first):
         return Chosen(tuple(substituted.digits), first)
-    fewer = [first] if needed else [*range(first, 0, -1), *range(-MOST_DECIMALS, 1)]
+    most = MOST_WANTED if first > start else MOST_DIGITS
+    fewer = [first] if needed else [first, first + 1, *range(first - 1, 0, -1)]
+    fewer += [] if needed else range(-MOST_DECIMALS, 1)
     if decimals is not None and not needed:
         fewer = [*range(-decimals, 1)]
-    for limit, digits in [*((MOST_DIGITS, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
+    for limit, digits in [*((most, n) for n in fewer), (ALL_DIGITS, needed or 1)]:
         if substituted.lengthened(digits, limit):
             return Chosen(tuple(substituted.digits), digits)
     return Chosen(tuple(substituted.digits), needed or 1)

@@ -11,6 +11,7 @@ from lineproof.formula import Criterion, Formula, Name, Number
 from lineproof.quantity.digits import (
     MOST_DECIMALS,
     MOST_DIGITS,
+    MOST_WANTED,
     START_DIGITS,
     Argument,
     Chosen,
@@ -44,7 +45,7 @@ _LEAST_FOUND = 4
 class _Print:
     """One print: of a value, or of the two sides of a comparison; as the last pass left it."""
 
-    __slots__ = ("ahead", "args", "due", "entry", "sides", "strings", "test", "uses")
+    __slots__ = ("args", "due", "entry", "sides", "strings", "test", "uses")
 
     def __init__(
         self,
@@ -54,7 +55,6 @@ class _Print:
         sides: tuple[float, float] = (0.0, 0.0),
     ) -> None:
         self.entry, self.args, self.test, self.sides = entry, args, test, sides
-        self.ahead: frozenset[int] = frozenset()
         self.strings: dict[str, Any] = {}
         self.uses: tuple[tuple[int, int], ...] = ()
         self.due = True
@@ -70,11 +70,9 @@ class Printer:
     """
 
     def __init__(self, entries: Sequence[Entry], shown: Mapping[int, int] | None = None) -> None:
-        self._begun = dict(shown or {})
-        self.digits = dict(self._begun)
+        self.digits = dict(shown or {})
         self._wanted: dict[int, int] = {}
         self._standing: dict[int, Standing] = {}
-        self._ahead: frozenset[int] = frozenset()
         self._values: dict[int, _Print] = {}
         self._comparisons: dict[int, _Print] = {}
         self._prints = self._laid_out(entries)
@@ -120,23 +118,14 @@ class Printer:
                 one = _Print(entry, args, entry.source.closing, sides)
                 made.append(one)
                 self._comparisons[id(entry)] = one
-        self._mark_ahead(made)
         return made
 
-    def _mark_ahead(self, prints: Sequence[_Print]) -> None:
-        """Tell each print which of its arguments are printed after it: not yet, in any pass."""
-        printed: set[int] = set()
-        for one in prints:
-            printed.add(id(one.entry))
-            one.ahead = frozenset(
-                id(arg) for arg in one.args if id(arg) in self._values and id(arg) not in printed
-            )
-
     def _settle(self) -> None:
-        """Print until no line asks for more digits of a value."""
+        """Print until no line asks for more digits of a value, and each shows them everywhere."""
         for _ in range(MOST_PASSES - 1):
             asked = self._pass()
-            if not self._tell(asked):
+            more = self._tell(asked)
+            if not (more or any(one.due for one in self._prints)):
                 break
         self._pass()
 
@@ -155,7 +144,7 @@ class Printer:
                     asked[key] = max(digits, asked.get(key, digits))
             if self.digits.get(own) != shown:
                 for user in self._users.get(own, ()):
-                    user.due = user.due or own not in user.ahead
+                    user.due = True
         return asked
 
     def _tell(self, asked: Mapping[int, int]) -> bool:
@@ -173,7 +162,6 @@ class Printer:
         return more
 
     def _print(self, one: _Print) -> None:
-        self._ahead = one.ahead
         if one.test is not None:
             one.strings, shown = self._compared(one, one.test)
         else:
@@ -194,9 +182,7 @@ class Printer:
 
     def _shown(self, entry: Entry) -> int:
         """Return the digits that an argument has shown so far in this pass."""
-        key = id(entry)
-        digits = self._begun if key in self._ahead else self.digits
-        return digits.get(key, START_DIGITS)
+        return self.digits.get(id(entry), START_DIGITS)
 
     def _arguments(self, args: Sequence[Entry]) -> list[Argument]:
         return [self._stands(arg).argument(self._shown(arg)) for arg in args]
@@ -318,7 +304,7 @@ def _starts(entry: Entry, wanted: int | None) -> int:
     wanted = wanted or 0
     if entry.kind == LINE:
         first = start_digits(entry.value / internal_factor(entry.unit), entry.unit)
-        return max(first, min(wanted, MOST_DIGITS))
+        return max(first, min(wanted, MOST_WANTED))
     return max(_LEAST_FOUND, wanted) if entry.kind == FOUND else wanted
 
 

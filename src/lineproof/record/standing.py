@@ -7,6 +7,7 @@ from decimal import Decimal
 from lineproof.formula import System
 from lineproof.quantity.digits import (
     MOST_DIGITS,
+    MOST_WANTED,
     START_DIGITS,
     Argument,
     number_text,
@@ -50,7 +51,7 @@ class Standing:
 
     def argument(self, shown: int) -> Argument:
         """Return the value as an argument that shows so many digits at its own line."""
-        return Argument(self.entry.value, min(max(shown, self._least), MOST_DIGITS), self._number)
+        return Argument(self.entry.value, min(max(shown, self._least), MOST_WANTED), self._number)
 
     def text(self, digits: int, system: System) -> str:
         """Return the value printed to so many digits in the units of a substitution."""

@@ -293,3 +293,30 @@ def test_ratios_of_the_summary_are_those_of_its_columns(
         numbers = [Decimal(row[at].partition(" ")[0]) for at in (demand, resistance)]
         ratio = (numbers[0] / numbers[1]).quantize(Decimal("0.01"), rounding=ROUND_HALF_UP)
         assert str(ratio) == row[-1], row
+
+
+def test_one_quantity_prints_with_the_same_digits_everywhere(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """At its own line and in every line that uses it, also in one printed before it.
+
+    Units differ by powers of ten only, so the digits must be the same.
+    """
+    entries = edge_beam[2].entries
+    uses = [
+        (holder["args"][name], text, key)
+        for key, entry in entries.items()
+        for holder in (entry, entry.get("closing", {}))
+        for name, text in holder.get("printed", {}).get("args", {}).items()
+    ]
+    assert len(uses) > 4000
+    others = [
+        (target, entries[target]["printed"]["result"], text, key)
+        for target, text, key in uses
+        if _figures(entries[target]["printed"]["result"]) != _figures(text)
+    ]
+    assert others == []
+
+
+def _figures(text: str) -> tuple[int, ...]:
+    return Decimal(text).normalize().as_tuple().digits
