@@ -32,12 +32,13 @@ FACTORS: dict[str, dict[str, Fraction]] = {
         "mm4": Fraction(1),
         "MPa": Fraction(1), "N": Fraction(1), "N/mm": Fraction(1), "N.mm": Fraction(1),
         "m": Fraction(1000), "kN": Fraction(1000), "kN.m": Fraction(10**6), "kN/m": Fraction(1),
-        "deg": Fraction(1), "mm2/mm": Fraction(1),
+        "deg": Fraction(1), "mm2/mm": Fraction(1), "N.mm/mm": Fraction(1),
+        "kN.m/m": Fraction(1000),
     },
     "kN-m": {
         "": Fraction(1), "m": Fraction(1), "kN": Fraction(1), "kN.m": Fraction(1),
         "kN/m": Fraction(1), "kPa": Fraction(1), "kN/m3": Fraction(1), "mm": Fraction(1, 1000),
-        "kN.m2": Fraction(1), "m2": Fraction(1),
+        "kN.m2": Fraction(1), "m2": Fraction(1), "kN.m/m": Fraction(1),
     },
 }  # fmt: skip
 

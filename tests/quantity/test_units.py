@@ -26,6 +26,7 @@ PINT_NAMES = {
     "kg/m3": "kg/m**3", "lb/ft3": "pound/foot**3", "lb": "pound", "lb/ft": "pound/foot",
     "deg": "degree", "rad": "radian", "h": "hour", "min": "minute", "d": "day",
     "mm2/mm": "mm**2/mm", "mm2/m": "mm**2/m", "N.mm2": "N*mm**2", "kN.m2": "kN*m**2",
+    "N.mm/mm": "N*mm/mm", "kN.m/m": "kN*m/m",
 }  # fmt: skip
 
 

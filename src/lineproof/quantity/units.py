@@ -81,6 +81,7 @@ _KINDS: dict[str, tuple[str, dict[str, str]]] = {
             "kip.ft": "kip*ft",
         },
     ),
+    "torque per length": ("N.mm/mm", {"N.mm/mm": "N*mm/mm", "kN.m/m": "kN*m/m"}),
     "load per length": (
         "N/mm",
         {
@@ -139,7 +140,7 @@ METRE_SYSTEM = {
     "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
     "moment": "kN.m", "load per length": "kN/m", "stress or pressure": "kPa",
     "unit weight": "kN/m3", "one over length": "1/m", "area per length": "mm2/mm",
-    "bending stiffness": "kN.m2",
+    "bending stiffness": "kN.m2", "torque per length": "kN.m/m",
 }  # fmt: skip
 """Units in which a formula of loads is substituted: kN and m instead of N and mm."""
 

@@ -252,7 +252,7 @@ class _Builder:
                 symbol.meaning or entry.source.title, symbol.unit or entry.unit,
             )  # fmt: skip
         self._used.setdefault(entry.symbol, symbol)
-        if entry.kind == LINE:
+        if entry.kind in (LINE, FOUND):
             for name, arg in zip(entry.source.names, entry.args, strict=True):
                 if name != arg.symbol:
                     self._used.setdefault(name, self._known.get(name) or symbol_from_id(name))

@@ -320,3 +320,31 @@ def test_one_quantity_prints_with_the_same_digits_everywhere(
 
 def _figures(text: str) -> tuple[int, ...]:
     return Decimal(text).normalize().as_tuple().digits
+
+
+def test_slopes_are_told_with_what_they_are_times_and_every_number_has_its_unit(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """With I in mm4 below the line, sums of moment times length over I are slopes times E: kPa."""
+    record = edge_beam[2]
+    found = record.entries["analysis/M_2rD"]
+    assert found["closing"]["unit"] == "kPa"
+    assert found["closing"]["conclusion"] == (
+        "The slopes of both spans agree (sides: slopes times E)."
+    )
+    units = {symbol["id"]: symbol["unit"] for symbol in record.data["notation"]}
+    assert [units[name] for name in ("I_1", "l_1", "K_1", "w_D1")] == ["mm4", "m", "mm3", "kN/m"]
+    words = [symbol["meaning"] for symbol in record.data["notation"]]
+    assert len({w for w in words if w.startswith("moment at support 2, on its")}) == 6
+
+
+def test_torques_per_length_carry_their_unit_and_where_they_come_from(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """5.5 and 5 kN.m per metre: 1.25 x 5.5 + 1.5 x 5 = 14.375 kN.m/m."""
+    given = edge_beam[2].entries["torsion-1/t_D"]
+    assert (given["printed"]["result"], given["printed"]["unit"]) == ("5.5", "kN.m/m")
+    assert given["source"] == "torques of the inputs"
+    values = [e for e in edge_beam[2].entries.values() if e["symbol"] == "t_f"]
+    assert {e["unit"] for e in values} == {"kN.m/m"}
+    assert max(e["value"] for e in values) == pytest.approx(1.25 * 5.5 + 1.5 * 5)

@@ -57,6 +57,9 @@ def _cases_text(model: Model) -> str:
 
 
 def _symbols(model: Model) -> Iterator[Symbol]:
+    for span in range(1, len(model.inertias) + 1):
+        meaning = f"moment of inertia of span {span}, gross section"
+        yield numbered(f"I_{span}", "I", str(span), meaning)
     for group in groups_of(model):
         words = f"live load on span {group.span}" if group.span else KINDS[group.kind]
         for span in range(1, model.spans + 1):
@@ -65,11 +68,12 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                 support = near_support(span, end)
                 if name:
                     side = {"l": "ℓ", "r": "r"}.get(name[2 + len(str(support))], "")
+                    of = {"ℓ": ", on its left", "r": ", on its right"}.get(side, "")
                     yield numbered(
                         name,
                         "M",
                         f"{support}{side},{group.text}",
-                        f"moment at support {support}, {words}",
+                        f"moment at support {support}{of}, {words}",
                     )
             for letter, end in (("a", "left"), ("b", "right")):
                 yield numbered(

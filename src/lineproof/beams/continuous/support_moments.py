@@ -194,6 +194,7 @@ class SupportMoments:
     ) -> Wanted:
         scale = self._scale(support)
         unit = "kPa" if self.model.inertias else "kN.m2"
+        times = "E" if self.model.inertias else "EI"
         if joint:
             closing = required(
                 f"abs({text}) <= 0.001*K_{support}*({scale})", "kN.m",
@@ -203,7 +204,7 @@ class SupportMoments:
         else:
             closing = required(
                 f"abs({text}) <= 0.001*({scale})", unit,
-                title=f"Slopes at support {support}", yes=_agree(text), key=f"slopes-{name}",
+                title=f"Slopes at support {support}", yes=_agree(text, times), key=f"slopes-{name}",
             )  # fmt: skip
         span, end = at
         return self._value(name, closing, span, end, support)
@@ -217,8 +218,11 @@ class SupportMoments:
         )  # fmt: skip
 
 
-def _agree(text: str) -> str:
-    return "The slopes of both spans agree." if text.count("l_") else "The slope is zero."
+def _agree(text: str, times: str) -> str:
+    """Say what a closing shows; its sides are slopes times ``times``, in the unit of that."""
+    if text.count("l_"):
+        return f"The slopes of both spans agree (sides: slopes times {times})."
+    return f"The slope is zero (sides: slopes times {times})."
 
 
 def _sum_of(first: str, second: str) -> str:

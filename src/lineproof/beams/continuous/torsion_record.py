@@ -48,8 +48,8 @@ def record_span_torsion(
     for kind, torque in torsion.torques.items():
         name = _symbol(kind)
         made[name] = sheet.given(
-            name, f"{torque / 1000:.12g} kN", f"torque per length by {_KINDS.get(kind, kind)}",
-            source="kN.m per metre of beam",
+            name, f"{torque / 1000:.12g} kN.m/m", f"torque per length by {_KINDS.get(kind, kind)}",
+            source="torques of the inputs",
         )  # fmt: skip
     held = _HELD_ONCE if cantilever else _HELD
     sheet.note(

@@ -187,7 +187,7 @@ _ROWS = (
     ("A_o", "A", "o", "", "area enclosed by the path of shear flow", "mm2"),
     ("A_t", "A", "t", "", "area of one leg of the stirrup", "mm2"),
     ("A_vr", "A", "v,r", "", "area of the stirrup legs that torsion leaves for shear", "mm2"),
-    ("t_f", "t", "f", "", "torque per length due to factored loads", "kN"),
+    ("t_f", "t", "f", "", "torque per length due to factored loads", "kN.m/m"),
     ("x_n", "x", "n", "", "distance of the section from the near face", "mm"),
     ("b_pf", "b", "pf", "", "width of the overhang that counts in the section cracked", "mm"),
     ("A_cf", "A", "cf", "", "area of the concrete, overhang counted", "mm2"),
