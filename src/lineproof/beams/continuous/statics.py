@@ -29,7 +29,7 @@ _GROSS = "Bending stiffness of the gross sections of the spans, with one modulus
 def record_analysis(model: Model) -> None:
     """Record the part of the analysis: support moments by group, reactions, equilibrium."""
     sheet = model.sheet
-    sheet.notation = sheet.notation | notation(_symbols(model))
+    sheet.notation = sheet.notation | notation((*_inertias(model), *_symbols(model)))
     with sheet.part(ANALYSIS, "Analysis: moments at the supports by load type"):
         sheet.note("signs", _SIGNS, title="Signs")
         sheet.note("cases", _cases_text(model), title="Load cases", clause="NBC 4.1.3.2")
@@ -56,10 +56,13 @@ def _cases_text(model: Model) -> str:
     return made
 
 
-def _symbols(model: Model) -> Iterator[Symbol]:
+def _inertias(model: Model) -> Iterator[Symbol]:
     for span in range(1, len(model.inertias) + 1):
         meaning = f"moment of inertia of span {span}, gross section"
         yield numbered(f"I_{span}", "I", str(span), meaning)
+
+
+def _symbols(model: Model) -> Iterator[Symbol]:
     for group in groups_of(model):
         words = f"live load on span {group.span}" if group.span else KINDS[group.kind]
         for span in range(1, model.spans + 1):
