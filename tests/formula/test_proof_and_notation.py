@@ -111,7 +111,7 @@ def test_a_criterion_compares() -> None:
 @pytest.mark.parametrize(
     ("symbol_id", "base", "sub"),
     [("f_c", "f", "c"), ("gamma_c", "γ", "c"), ("w_cb", "w", "cb"), ("lambda_", "λ", ""),
-     ("M_r_max", "M", "r,max"), ("eps_phi", "ε", "φ"), ("h", "h", "")],
+     ("M_r_max", "M", "r,max"), ("eps_phi", "ε", "φ"), ("h", "h", ""), ("l_av1", "ℓ", "av1")],
 )  # fmt: skip
 def test_typeset_parts_of_an_id(symbol_id: str, base: str, sub: str) -> None:
     made = symbol_from_id(symbol_id, "what it means", "mm")

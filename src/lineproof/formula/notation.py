@@ -52,13 +52,14 @@ def check_id(symbol_id: str) -> str:
 def symbol_from_id(symbol_id: str, meaning: str = "", unit: str = "") -> Symbol:
     """Derive the typeset parts from an id: ``gamma_c`` gives γ with subscript c.
 
-    >>> symbol_from_id("w_cb").sub, symbol_from_id("phi_s").base
-    ('cb', 'φ')
+    >>> symbol_from_id("w_cb").sub, symbol_from_id("phi_s").base, symbol_from_id("l_av").base
+    ('cb', 'φ', 'ℓ')
     """
     check_id(symbol_id)
     base, _, rest = symbol_id.strip("_").partition("_")
     sub = ",".join(GREEK.get(piece, piece) for piece in rest.split("_") if piece)
-    return Symbol(symbol_id, GREEK.get(base, base), sub, "", meaning, unit)
+    base = "ℓ" if base == "l" else GREEK.get(base, base)  # a length, told apart from one
+    return Symbol(symbol_id, base, sub, "", meaning, unit)
 
 
 class Notation(Mapping[str, Symbol]):

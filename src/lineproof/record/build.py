@@ -157,13 +157,13 @@ class _Builder:
         return {"key": part.key, "label": label, "title": part.title, "entries": rows}
 
     def _entry(self, entry: Entry, label: str) -> dict[str, Any]:
-        source, extra = entry.source, entry.extra or {}
+        source = entry.source
         common = {
             "id": entry.id,
             "kind": entry.kind,
             "symbol": entry.symbol,
             "label": label,
-            "title": extra.get("title") or source.title,
+            "title": _title_of(entry),
             "clause": source.clause,
             "basis": source.basis,
             "digest": entry.digest,
@@ -249,7 +249,7 @@ class _Builder:
         if not symbol.meaning or not symbol.unit:
             symbol = Symbol(
                 symbol.id, symbol.base, symbol.sub, symbol.sup,
-                symbol.meaning or entry.source.title, symbol.unit or entry.unit,
+                symbol.meaning or _title_of(entry), symbol.unit or entry.unit,
             )  # fmt: skip
         self._used.setdefault(entry.symbol, symbol)
         if entry.kind in (LINE, FOUND):
@@ -274,6 +274,11 @@ def _check_kinds(entry: Entry) -> None:
             raise UserError(
                 f"{entry.id}: {name} is a {wanted}, but {arg.id} is a {UNITS[arg.unit].kind}"
             )
+
+
+def _title_of(entry: Entry) -> str:
+    """Return the title of an entry: its own, else that of what it was made by."""
+    return str((entry.extra or {}).get("title") or entry.source.title)
 
 
 def _symbol_of(entry: Entry) -> Symbol | None:

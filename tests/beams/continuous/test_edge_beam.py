@@ -5,6 +5,7 @@ from __future__ import annotations
 import ast
 import json
 import math
+from collections import Counter
 from decimal import ROUND_HALF_UP, Decimal
 from pathlib import Path
 from typing import Any
@@ -348,3 +349,11 @@ def test_torques_per_length_carry_their_unit_and_where_they_come_from(
     values = [e for e in edge_beam[2].entries.values() if e["symbol"] == "t_f"]
     assert {e["unit"] for e in values} == {"kN.m/m"}
     assert max(e["value"] for e in values) == pytest.approx(1.25 * 5.5 + 1.5 * 5)
+
+
+def test_symbols_that_are_apart_have_words_apart(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """On the notation page each meaning stands once."""
+    words = Counter(symbol["meaning"] for symbol in edge_beam[2].data["notation"])
+    assert [meaning for meaning, times in words.items() if times > 1] == []

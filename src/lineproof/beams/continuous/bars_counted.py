@@ -29,20 +29,26 @@ def record_area(steps: Steps, symbol: str, shares: Iterable[Share]) -> Entry:
         steps.bind(**{symbol: made})
         return made
     letter = "t" if symbol == "A_s" else "c"
+    side = {"t": "tension", "c": "compression"}[letter]
     bound: dict[str, Any] = {}
     terms = []
     for place, ((size, part, length, rise), number) in enumerate(sorted(counts.items()), start=1):
         area, count = f"A_{letter}{size}", f"n_{letter}{place}"
         if area not in bound:
-            bound[area] = sheet.lookup(area, BARS, size, "A_b", title=f"area of one bar {size}")
+            bound[area] = sheet.lookup(
+                area, BARS, size, "A_b", title=f"area of one bar {size}, {side} side"
+            )
         bound[count] = sheet.given(
-            count, str(number), f"number of bars {size}", source="bars as laid"
+            count,
+            str(number),
+            f"number of bars {size}, {side} side, group {place}",
+            source="bars as laid",
         )
         term = f"{count}*{area}"
         if part < 1:
             name = f"r_{letter}{place}"
             bound[name] = sheet.given(
-                name, f"{part:.12g}", f"part developed of these bars {size}",
+                name, f"{part:.12g}", f"part developed of bars {size}, {side} side, group {place}",
                 source=f"{length:.0f} mm to the end of the bars, of {rise:.0f} mm needed",
             )  # fmt: skip
             term = f"{term}*{name}"

@@ -177,10 +177,13 @@ def record_developed(steps: Steps, rows: Iterable[tuple[Group, float, Entry]]) -
     groups = tuple(group for group, _, _ in kept)
     areas = []
     for index, (group, length, needed) in enumerate(kept, 1):
-        mark = "" if len(kept) == 1 else str(index)
+        mark, of_group = ("", "") if len(kept) == 1 else (str(index), f", group {index}")
         A_s = _record_group(steps, group, mark, f"A_s{mark}")
         l_av = steps.sheet.given(
-            f"l_av{mark}", plain(length, "mm"), "length from the end of the bars", source="as laid"
+            f"l_av{mark}",
+            plain(length, "mm"),
+            "length from the end of the bars" + of_group,
+            source="as laid",
         )
         symbol = f"A_sd{mark}"
         areas.append(steps.line(development.DEVELOPED_AREA, symbol, A_s=A_s, l_av=l_av, l_d=needed))

@@ -66,7 +66,7 @@ def record_local(
     for stage, rows in terms.items():
         words = " + ".join(_term(load, entry, stage) for load, entry in rows)
         if rows and words not in recorded:
-            recorded[words] = _sum(steps, f"M_P{letter}{_ENDINGS[stage]}", words, rows)
+            recorded[words] = _sum(steps, stage, letter, words, rows)
         if rows:
             sums[stage] = recorded[words]
     return sums
@@ -116,11 +116,20 @@ def _addition(
         if cantilever == "left":
             a_s = line(stages.FROM_RIGHT, symbol=f"a_s{place}", x_P=x_P, l=l)
         return line(stages.POINT_LOAD_CANTILEVER, symbol=symbol, P_s=P_s, a_s=a_s, l=l)
-    a_s = line(stages.FROM_NEARER, symbol=f"a_s{place}", x_P=x_P, l=l)
-    return line(stages.POINT_LOAD, symbol=symbol, P_s=P_s, a_s=a_s, l=l)
+    near, added = (
+        f"{made.title}, load {place}" for made in (stages.FROM_NEARER, stages.POINT_LOAD)
+    )
+    a_s = line(stages.FROM_NEARER, symbol=f"a_s{place}", title=near, x_P=x_P, l=l)
+    return line(stages.POINT_LOAD, symbol=symbol, title=added, P_s=P_s, a_s=a_s, l=l)
 
 
 _ENDINGS: Mapping[Stage, str] = {"dead": "D", "sustained": "sus", "all": "DL", "rise": "R"}
+
+
+_SUMMED: Mapping[Stage, str] = {
+    "dead": "dead load", "sustained": "sustained load", "all": "all load",
+    "rise": "least load downwards",
+}  # fmt: skip
 
 
 def _term(load: LocalLoad, entry: Entry, stage: Stage) -> str:
@@ -128,7 +137,9 @@ def _term(load: LocalLoad, entry: Entry, stage: Stage) -> str:
     return entry.symbol if share is None else f"{share.symbol}*{entry.symbol}"
 
 
-def _sum(steps: Steps, symbol: str, words: str, rows: Sequence[tuple[LocalLoad, Entry]]) -> Entry:
+def _sum(
+    steps: Steps, stage: Stage, letter: str, words: str, rows: Sequence[tuple[LocalLoad, Entry]]
+) -> Entry:
     """Record the sum of what the loads of a stage add; one alone stands for itself."""
     if words == rows[0][1].symbol:
         return rows[0][1]
@@ -136,8 +147,8 @@ def _sum(steps: Steps, symbol: str, words: str, rows: Sequence[tuple[LocalLoad, 
     bound |= {load.share.symbol: load.share for load, _ in rows if load.share is not None}
     args = {name: entry for name, entry in bound.items() if name in words}
     return steps.sheet.line(
-        f"{symbol} = {words}", unit="kN.m", system="kN-m",
-        title="Addition to the moment for all of them", **args,
+        f"M_P{letter}{_ENDINGS[stage]} = {words}", unit="kN.m", system="kN-m",
+        title=f"Addition to the moment, {_SUMMED[stage]}", **args,
     )  # fmt: skip
 
 
