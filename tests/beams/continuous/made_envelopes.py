@@ -3,7 +3,12 @@
 from __future__ import annotations
 
 from lineproof.beams.continuous.figure_deflection import DeflectionCurve, DeflectionPiece
-from lineproof.beams.continuous.figure_envelope import MomentPiece, ShearPiece
+from lineproof.beams.continuous.figure_envelope import (
+    RESTRAINED,
+    MomentPiece,
+    Section,
+    ShearPiece,
+)
 from lineproof.beams.continuous.layout import BeamOutline
 
 STEPS = 40
@@ -74,6 +79,33 @@ def shears(beam: BeamOutline) -> list[ShearPiece]:
             ShearPiece(span, xs, high, low, [whole * (0.6 if t > 0.28 else 0.4) for t in near])
         )
     return pieces
+
+
+def moment_sections(beam: BeamOutline) -> list[Section]:
+    """Return a section at midspan and at both faces of every span, restraint at the outer ones."""
+    found = []
+    for piece in moments(beam):
+        middle = len(piece.x) // 2
+        for index in (0, middle, len(piece.x) - 1):
+            outer = piece.x[index] in (beam.faces(1)[0], beam.faces(len(beam.lengths))[1])
+            M = piece.M_max[index] if index == middle else piece.M_min[index]
+            M_r = piece.M_r_pos[index] if index == middle else piece.M_r_neg[index]
+            words = RESTRAINED if outer and index != middle else ""
+            found.append(Section(piece.x[index], -0.02 * M_r if words else M, M_r, words))
+    return found
+
+
+def shear_sections(beam: BeamOutline) -> list[Section]:
+    """Return sections near both faces, two cases at one of them, and one without resistance."""
+    found = []
+    for piece in shears(beam):
+        near, far = 3, len(piece.x) - 4
+        found += [
+            Section(piece.x[near], piece.V_max[near], piece.V_r[near]),
+            Section(piece.x[near], 0.9 * piece.V_max[near], 1.2 * piece.V_r[near]),
+            Section(piece.x[far], piece.V_min[far], None if piece.span == 1 else piece.V_r[far]),
+        ]
+    return found
 
 
 def deflections(

@@ -22,7 +22,9 @@ from lineproof.beams.continuous.figure_deflection import (
     deflection_figure,
 )
 from lineproof.beams.continuous.figure_envelope import (
+    RESTRAINED,
     MomentPiece,
+    Section,
     ShearPiece,
     moment_figure,
     shear_figure,
@@ -33,7 +35,7 @@ from lineproof.beams.continuous.layout import BuiltSupport
 from lineproof.drawing import Arrow, Circle, Figure, Line, Polyline, Text
 
 from .by_hand import COLUMN, FREE_END, GIRDER, outline
-from .made_envelopes import deflections, moments, shears
+from .made_envelopes import deflections, moment_sections, moments, shear_sections, shears
 from .print_checks import assert_readable, plain, words_of
 
 LENGTHS = (7600.0, 9200.0, 7600.0, 7000.0, 6000.0, 8400.0)
@@ -63,8 +65,8 @@ def test_curves_are_readable(count: int) -> None:
     beam = outline(LENGTHS[:count])
     names = ("immediate, live load", "after attachment, sustained", "total")
     for figure in (
-        moment_figure(beam, moments(beam)),
-        shear_figure(beam, shears(beam)),
+        moment_figure(beam, moments(beam), moment_sections(beam)),
+        shear_figure(beam, shears(beam), shear_sections(beam)),
         deflection_figure(beam, deflections(beam, names)),
     ):
         assert_readable(figure, DIMENSIONS)
@@ -75,8 +77,8 @@ def test_cantilevers_are_readable(lengths: tuple[float, ...]) -> None:
     """Short cantilevers beside long spans."""
     beam = outline(lengths, left=FREE_END, right=FREE_END)
     for figure in (
-        moment_figure(beam, moments(beam)),
-        shear_figure(beam, shears(beam)),
+        moment_figure(beam, moments(beam), moment_sections(beam)),
+        shear_figure(beam, shears(beam), shear_sections(beam)),
         deflection_figure(beam, deflections(beam, ("immediate", "total"))),
     ):
         assert_readable(figure, DIMENSIONS)
@@ -90,7 +92,7 @@ def test_long_beams_take_several_figures() -> None:
     assert [piece.span for group in groups for piece in group] == list(range(1, 25))
     for group in groups:
         assert len(group) == 6
-        assert_readable(moment_figure(beam, group), DIMENSIONS)
+        assert_readable(moment_figure(beam, group, moment_sections(beam)), DIMENSIONS)
 
 
 def one_span(M_r: float = 500e6) -> MomentPiece:
@@ -111,9 +113,12 @@ def test_moment_is_drawn_on_the_side_in_tension() -> None:
     assert any("side in tension" in text for text in words_of(figure))
 
 
-def test_peaks_have_their_values() -> None:
-    """Largest of the span, smallest at the faces, each with the resistance there."""
-    figure = moment_figure(ONE, [one_span()])
+BENT = (Section(4000.0, 400e6, 500e6), Section(7775.0, -100e6, 120e6))
+
+
+def test_sections_have_their_values() -> None:
+    """The section of the span and that of the face, each with its own resistance."""
+    figure = moment_figure(ONE, [one_span()], BENT)
     said = words_of(figure)
 
     assert [text for text in said if text.startswith("M") and "=" in text] == [
@@ -123,6 +128,46 @@ def test_peaks_have_their_values() -> None:
     assert "at 7775 mm Mf = −100, Mr = −120 kN·m" in figure.alt
     dots = [s.centre for s in figure.shapes if isinstance(s, Circle) and s.layer == "curve"]
     assert curves_of(figure)[0].points[1] in dots
+
+
+def test_values_are_those_of_the_section_to_the_digits_of_the_table() -> None:
+    """271.44 kN prints 271 although the envelope beside it has 320; 96.35 prints 96.4 as there."""
+    sections = (Section(1000.0, 96.35e3, 271.44e3),)
+    said = words_of(shear_figure(ONE, [shear_piece()], sections))
+
+    assert [text for text in said if "=" in text] == ["Vr = 271", "Vf = 96.4"]
+
+
+def test_each_case_of_a_place_is_said_once() -> None:
+    """Two cases at one place both stand there; a third with the same numbers adds nothing.
+
+    At 7000 mm the envelope has 300 x 3000/4000 = 225 kN, so a dot at 114 lies inside.
+    """
+    sections = [Section(7000.0, -225e3, 271e3), Section(7000.0, -114e3, 325e3)]
+    figure = shear_figure(ONE, [shear_piece()], [*sections, sections[0]])
+    said = words_of(figure)
+
+    assert sorted(text for text in said if "=" in text) == [
+        "Vf = −114", "Vf = −225", "Vr = −271", "Vr = −325",
+    ]  # fmt: skip
+    assert any("dot inside the curves" in text for text in said)
+    alone = words_of(shear_figure(ONE, [shear_piece()], sections[:1]))
+    assert not any("dot inside the curves" in text for text in alone)
+
+
+def test_moment_of_restraint_is_named() -> None:
+    """A moment that no load case has stands off the curves and says what it is."""
+    held = Section(200.0, -115e6, 219e6, RESTRAINED)
+    figure = moment_figure(ONE, [one_span()], [*BENT, held])
+
+    assert "at 200 mm Mf = −115, Mr = −219, restraint kN·m" in figure.alt
+    assert any(text.startswith("Restraint: assumed") for text in words_of(figure))
+    assert not any("estraint" in text for text in words_of(moment_figure(ONE, [one_span()], BENT)))
+
+
+def test_section_without_resistance_says_so() -> None:
+    figure = shear_figure(ONE, [shear_piece()], [Section(1000.0, 225e3, None)])
+    assert {"Vf = 225", "no Vr"} <= set(words_of(figure))
 
 
 def test_moment_over_the_resistance_is_marked() -> None:
@@ -156,13 +201,15 @@ def shear_piece() -> ShearPiece:
 
 def test_shear_values_at_critical_sections() -> None:
     """At 1000 mm: 300 x 3000/4000 = 225 kN; at 7000 mm as much upward."""
-    figure = shear_figure(ONE, [shear_piece()], stations=(1000.0, 7000.0))
+    sections = (Section(1000.0, 225e3, 320e3), Section(7000.0, -225e3, 320e3))
+    critical = (1000.0, 7000.0)
+    figure = shear_figure(ONE, [shear_piece()], sections, critical)
     said = words_of(figure)
 
     assert {"Vf = 225", "Vr = 320", "Vf = −225", "Vr = −320"} <= set(said)
     assert not any("EXCEEDED" in text for text in said)
     low = ShearPiece(1, shear_piece().x, shear_piece().V_max, shear_piece().V_min, [140e3] * 6)
-    assert "exceeded" in shear_figure(ONE, [low], stations=(1000.0, 7000.0)).alt
+    assert "exceeded" in shear_figure(ONE, [low], critical=critical).alt
 
 
 def test_positive_shear_is_drawn_upward() -> None:
@@ -191,13 +238,14 @@ def test_deflections() -> None:
         ])
         for name, size in (("immediate", 4.2), ("total", 9.6))
     ]  # fmt: skip
-    figure = deflection_figure(beam, curves)
+    figure = deflection_figure(beam, curves, notes=("Not those of the checks.",))
     said = words_of(figure)
 
     assert {"(a) 4.2", "(b) 9.6", "(a) −2.1", "(b) −4.8"} <= set(said)
     assert {"(a) immediate", "(b) total"} <= set(said)
     first = curves_of(figure)[0].points
     assert first[1][1] < first[0][1]
+    assert "Not those of the checks." in said
     assert not any("coincides" in each for each in said)
     twice = words_of(deflection_figure(beam, [curves[0], replace(curves[0], name="again")]))
     assert any("(b) coincides with (a)." in each for each in twice)

@@ -34,6 +34,14 @@ from lineproof.drawing import Figure
 from lineproof.errors import UserError
 from lineproof.record import Entry
 
+CHECKED = (
+    "Values here: the largest of a span, by the curvature of every section. Values of the checks: "
+    "at midspan, by one effective moment of inertia."
+)
+UNCHECKED = (
+    "A span that has the least depth (9.8.2.1) has no check of its deflection: no limit applies to "
+    "the values here."
+)
 _NAMES = ("immediate, dead and live load", "after attachment", "total, long term")
 
 
@@ -56,9 +64,19 @@ def deflection_shapes_figure(design: Design) -> Figure | None:
         for name, piece in zip(_NAMES, found[span], strict=True):
             pieces[name].append(piece)
     curves = [DeflectionCurve(name, pieces[name]) for name in _NAMES]
-    return deflection_figure(
-        design.outline, curves, "Deflected shapes, by curvature along the spans, for information"
-    )
+    caption = "Deflected shapes, by curvature along the spans, for information"
+    return deflection_figure(design.outline, curves, caption, _notes(model))
+
+
+def _notes(model: Model) -> list[str]:
+    """Say how the values of the figure differ from those that the checks compare."""
+    checked = [
+        any(e.kind == "check" and name.startswith("deflection") for name, e in made.items())
+        for made in (
+            model.sheet.entries_of(deflection_key(span)) for span in range(1, model.spans + 1)
+        )
+    ]
+    return [*([CHECKED] if any(checked) else []), *([] if all(checked) else [UNCHECKED])]
 
 
 def bent_of(

@@ -65,7 +65,7 @@ class Along:
     label: Runs
     unit: str
     downward: bool = False
-    note: str = ""
+    notes: tuple[str, ...] = ()
     height: float = 58.0
     exceeded: tuple[tuple[float, float], ...] = ()
     """Stretches where the resistance is exceeded: the axis is drawn thick there."""
@@ -220,8 +220,7 @@ def _marks(axes: Axes, band: _Band, way: float) -> list[Shape]:
 
 def _legend(data: Along) -> list[tuple[str, Dash | None]]:
     lines: list[tuple[str, Dash | None]] = [(each.name, each.dash) for each in data.curves]
-    if data.note:
-        lines.append((data.note, None))
+    lines += [(note, None) for note in data.notes]
     if data.exceeded:
         lines.append((EXCEEDED, None))
     return lines

@@ -34,12 +34,15 @@ class DeflectionCurve:
 
 
 def deflection_figure(
-    outline: BeamOutline, curves: Sequence[DeflectionCurve], caption: str = "Deflections"
+    outline: BeamOutline,
+    curves: Sequence[DeflectionCurve],
+    caption: str = "Deflections",
+    notes: Sequence[str] = (),
 ) -> Figure:
     """Draw up to four deflected shapes, each with the largest value of each span.
 
     At the place of the largest value of the last curve the values of all curves are printed, in
-    the order of their names.
+    the order of their names. ``notes`` say what the values are.
     """
     if not 1 <= len(curves) <= len(DASHES):
         msg = f"{len(curves)} deflected shapes; one figure shows 1 to {len(DASHES)}"
@@ -65,7 +68,7 @@ def deflection_figure(
             label=(("deflection, mm", "roman"),),
             unit="mm",
             downward=True,
-            note=" ".join((note, *_coincident(curves))),
+            notes=(" ".join((note, *_coincident(curves))), *notes),
             height=42.0,
         ),
         caption,

@@ -5,16 +5,30 @@ Moments are drawn on the side in tension: positive moments below the axis.
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+import math
+from collections.abc import Sequence
 from dataclasses import dataclass
-from types import MappingProxyType
+
+import numpy as np
 
 from lineproof.beams.continuous.figure_along import Along, Curve, Mark, along_figure
 from lineproof.beams.continuous.layout import BeamOutline
-from lineproof.drawing import Figure, Runs, symbol
-from lineproof.quantity.digits import fixed
+from lineproof.drawing import Figure, Runs, symbol, words
+from lineproof.quantity.digits import MINUS
+from lineproof.record.printing import in_unit
 
 KNM, KN = 1e-6, 1e-3
+OFF = 0.5
+"""A shear is off the curve by more than what is printed [kN]."""
+DIGITS = 3
+"""Values print as in the tables of the summary."""
+SIDE = "Moments are drawn on the side in tension: positive moments below the axis."
+RESTRAINED = "restraint"
+RESTRAINT = (
+    "Restraint: assumed at an end that is analysed as free to rotate; the curves of the load cases "
+    "leave it out."
+)
+INSIDE = "A dot inside the curves is of a further load case, with the resistance that it has."
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,14 +58,31 @@ class ShearPiece:
     V_r: Sequence[float]
 
 
-def moment_figure(outline: BeamOutline, pieces: Sequence[MomentPiece]) -> Figure:
-    """Draw the moment envelope with the resistance; values at the peaks, faces marked."""
+@dataclass(frozen=True, slots=True)
+class Section:
+    """A section of the working at ``x`` along the beam [mm], with the values of its lines.
+
+    ``demand`` is a moment, positive with the bottom in tension [N.mm], or a shear [N];
+    ``resistance`` a magnitude, None where the method gives none. ``words`` tell a moment that no
+    load case has.
+    """
+
+    x: float
+    demand: float
+    resistance: float | None
+    words: str = ""
+
+
+def moment_figure(
+    outline: BeamOutline, pieces: Sequence[MomentPiece], sections: Sequence[Section] = ()
+) -> Figure:
+    """Draw the moment envelope with the resistance; the values of ``sections``, faces marked."""
     demand = [_scaled(p.x, p.M_max, KNM) for p in pieces]
     demand += [_scaled(p.x, p.M_min, KNM) for p in pieces]
     resistance = [_scaled(p.x, p.M_r_pos, KNM) for p in pieces]
     resistance += [_scaled(p.x, [-abs(m) for m in p.M_r_neg], KNM) for p in pieces]
-    low = [_peak(p.x, p.M_max, p.M_r_pos, 1.0, KNM, "M") for p in pieces]
-    top = [mark for p in pieces for mark in _ends(outline, p)]
+    marks = _marks(sections, outline, [p.span for p in pieces], "M", "kN.m")
+    restrained = any(RESTRAINED in map(_plain, mark.lines) for mark in marks)
     return along_figure(
         outline,
         Along(
@@ -60,12 +91,12 @@ def moment_figure(outline: BeamOutline, pieces: Sequence[MomentPiece]) -> Figure
                 Curve("largest and smallest factored moment of all cases", demand, "solid"),
                 Curve("resistance of the bars as detailed", resistance, "long"),
             ),
-            above=tuple(top),
-            below=tuple(mark for mark in low if mark is not None),
+            above=tuple(mark for mark in marks if mark.y < 0.0),
+            below=tuple(mark for mark in marks if mark.y >= 0.0),
             label=(*symbol("M"), (", kN·m", "roman")),
             unit="kN·m",
             downward=True,
-            note="Moments are drawn on the side in tension: positive moments below the axis.",
+            notes=(SIDE, RESTRAINT) if restrained else (SIDE,),
             exceeded=tuple(
                 stretch
                 for p in pieces
@@ -89,89 +120,76 @@ def _scaled(x: Sequence[float], y: Sequence[float], factor: float) -> list[tuple
     return [(a, factor * b) for a, b in zip(x, y, strict=True)]
 
 
-def _value(name: str, sub: str, value: float) -> Runs:
-    return (*symbol(name, sub), (f" = {fixed(value, 0)}", "roman"))
+def _value(name: str, sub: str, value: float, unit: str) -> Runs:
+    sign = MINUS if value < 0.0 else ""
+    return (*symbol(name, sub), (f" = {sign}{in_unit(abs(value), unit, DIGITS)}", "roman"))
 
 
-def _mark(x: float, demand: float, resistance: float, name: str) -> Mark:
-    lines = (_value(name, "f", demand), _value(name, "r", resistance))
-    return Mark(x, demand, lines)
-
-
-def _peak(
-    x: Sequence[float],
-    demand: Sequence[float],
-    resistance: Sequence[float],
-    sign: float,
-    factor: float,
-    name: str,
-) -> Mark | None:
-    """Greatest demand of one sign with the resistance there; none where there is no such."""
-    if not x:
-        return None
-    index = max(range(len(x)), key=lambda i: sign * demand[i])
-    if sign * demand[index] <= 0.0:
-        return None
-    return _mark(x[index], factor * demand[index], sign * factor * abs(resistance[index]), name)
-
-
-def _ends(outline: BeamOutline, piece: MomentPiece) -> list[Mark]:
-    """Peaks of the negative moment in the left and the right half of the clear length."""
-    start, end = outline.faces(piece.span)
-    middle = (start + end) / 2
+def _marks(
+    sections: Sequence[Section], outline: BeamOutline, spans: Sequence[int], name: str, unit: str
+) -> list[Mark]:
+    """Return a mark a section of the spans shown; what would be said twice at a place once."""
+    low, high = outline.axes[min(spans) - 1], outline.axes[max(spans)]
+    factor = KNM if unit == "kN.m" else KN
     marks: list[Mark] = []
-    for low, high in ((start, middle), (middle, end)):
-        inside = [i for i, x in enumerate(piece.x) if low - 1e-6 <= x <= high + 1e-6]
-        mark = _peak(
-            [piece.x[i] for i in inside],
-            [piece.M_min[i] for i in inside],
-            [piece.M_r_neg[i] for i in inside],
-            -1.0,
-            KNM,
-            "M",
-        )
-        if mark is not None and not any(mark.x == other.x for other in marks):
+    for section in sections:
+        if not low <= section.x <= high:
+            continue
+        lines = [_value(name, "f", section.demand, unit)]
+        if section.resistance is None:
+            lines.append((("no ", "roman"), *symbol(name, "r")))
+        else:
+            resistance = math.copysign(section.resistance, section.demand)
+            lines.append(_value(name, "r", resistance, unit))
+        if section.words:
+            lines.append(words(section.words))
+        mark = Mark(section.x, factor * section.demand, tuple(lines))
+        if not any(mark.x == other.x and mark.lines == other.lines for other in marks):
             marks.append(mark)
     return marks
+
+
+def _plain(line: Runs) -> str:
+    return "".join(text for text, _ in line)
+
+
+def _inside(pieces: Sequence[ShearPiece], marks: Sequence[Mark]) -> bool:
+    """Tell whether a mark lies nearer zero than the curve: its case is not the largest there."""
+    for mark in marks:
+        piece = next(p for p in pieces if p.x[0] <= mark.x <= p.x[-1])
+        largest = np.interp(mark.x, piece.x, piece.V_max if mark.y > 0.0 else piece.V_min)
+        if abs(mark.y) < KN * abs(largest) - OFF:
+            return True
+    return False
 
 
 def shear_figure(
     outline: BeamOutline,
     pieces: Sequence[ShearPiece],
-    stations: Sequence[float] = (),
-    own: Mapping[float, float] = MappingProxyType({}),
+    sections: Sequence[Section] = (),
+    critical: Sequence[float] = (),
 ) -> Figure:
     """Draw the shear envelope with the resistance of the zones, both signs.
 
-    Values are printed at ``stations`` [mm], the critical sections; without them at the faces. A
-    section beside a stretch without resistance has its ``own`` [N].
-    Only between the critical sections of a span is a shear over the resistance marked: nearer
-    the supports the shear of the critical section holds.
+    The values of ``sections`` [N] are printed at their places. Only between the ``critical``
+    sections of a span [mm] is a shear over the resistance marked: nearer the supports the shear
+    of the critical section holds.
     """
     demand = [_scaled(p.x, p.V_max, KN) for p in pieces]
     demand += [_scaled(p.x, p.V_min, KN) for p in pieces]
     resistance = [_scaled(p.x, p.V_r, KN) for p in pieces]
     resistance += [_scaled(p.x, [-v for v in p.V_r], KN) for p in pieces]
-    above: list[Mark] = []
-    below: list[Mark] = []
+    marks = _marks(sections, outline, [p.span for p in pieces], "V", "kN")
     exceeded: list[tuple[float, float]] = []
     for piece in pieces:
         start, end = outline.faces(piece.span)
-        critical = [x for x in stations if start <= x <= end]
-        if critical:
+        inside = [x for x in critical if start <= x <= end]
+        if inside:
             over = [
                 max(high, -low) > V_r
                 for high, low, V_r in zip(piece.V_max, piece.V_min, piece.V_r, strict=True)
             ]
-            exceeded += _exceeded(piece.x, over, (min(critical), max(critical)))
-        wanted = critical or [start, end]
-        for x in wanted:
-            high, low, V_r = (_at(piece.x, y, x) for y in (piece.V_max, piece.V_min, piece.V_r))
-            V_r = V_r or own.get(x, 0.0)
-            if high >= -low:
-                above.append(_mark(x, KN * high, KN * V_r, "V"))
-            else:
-                below.append(_mark(x, KN * low, -KN * V_r, "V"))
+            exceeded += _exceeded(piece.x, over, (min(inside), max(inside)))
     return along_figure(
         outline,
         Along(
@@ -180,10 +198,11 @@ def shear_figure(
                 Curve("largest and smallest factored shear of all cases", demand, "solid"),
                 Curve("resistance of web and stirrups", resistance, "long"),
             ),
-            above=tuple(above),
-            below=tuple(below),
+            above=tuple(mark for mark in marks if mark.y >= 0.0),
+            below=tuple(mark for mark in marks if mark.y < 0.0),
             label=(*symbol("V"), (", kN", "roman")),
             unit="kN",
+            notes=(INSIDE,) if _inside(pieces, marks) else (),
             exceeded=tuple(exceeded),
         ),
         "Shear envelope and resistance of the stirrup zones",
@@ -205,15 +224,3 @@ def _exceeded(
         else:
             found.append((low, high))
     return found
-
-
-def _at(x: Sequence[float], y: Sequence[float], station: float) -> float:
-    """Interpolate; the nearest end beyond the stations."""
-    if station <= x[0]:
-        return y[0]
-    for index in range(1, len(x)):
-        if station <= x[index]:
-            run = x[index] - x[index - 1]
-            part = (station - x[index - 1]) / run if run else 1.0
-            return y[index - 1] + part * (y[index] - y[index - 1])
-    return y[-1]

@@ -14,6 +14,7 @@ from lineproof.beams.continuous.cures_flow import Found, failing_rows
 from lineproof.beams.continuous.deflection_figure import deflection_shapes_figure
 from lineproof.beams.continuous.deliverables import record_drawings
 from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.envelope_sections import moment_sections, shear_sections
 from lineproof.beams.continuous.figure_along import in_figures
 from lineproof.beams.continuous.figure_envelope import (
     MomentPiece,
@@ -184,10 +185,11 @@ def _record_envelopes(design: Design) -> None:
                         top.tolist())
         )  # fmt: skip
         shears.append(ShearPiece(span, x, V.max(0).tolist(), V.min(0).tolist(), V_r))
+    bent, sheared = list(moment_sections(design)), list(shear_sections(design))
     for number, part in enumerate(in_figures(moments), start=1):
-        _figure(sheet, f"moments-{number}", moment_figure(design.outline, part), ALONG, rests)
+        _figure(sheet, f"moments-{number}", moment_figure(design.outline, part, bent), ALONG, rests)
     for number, each in enumerate(in_figures(shears), start=1):
-        figure = shear_figure(design.outline, each, stations=_critical(design), own=_own(design))
+        figure = shear_figure(design.outline, each, sheared, _critical(design))
         _figure(sheet, f"shears-{number}", figure, ALONG + 1, rests)
     shapes = deflection_shapes_figure(design)
     if shapes is not None:
@@ -211,17 +213,6 @@ def _critical(design: Design) -> list[float]:
         for s in row
         if s.place != "station"
     ]
-
-
-def _own(design: Design) -> dict[float, float]:
-    """Return V_r of the sections that have one where that along the beam begins to be none."""
-    sheet, axes = design.model.sheet, design.outline.axes
-    made = {}
-    for section in (s for row in design.stirrups.sections for s in row):
-        V_r = sheet.entries_of(section.key).get("V_r")
-        if V_r is not None:
-            made[axes[section.span - 1] + section.demand.x] = float(V_r.value)
-    return made
 
 
 def _record_stations(model: Model) -> None:

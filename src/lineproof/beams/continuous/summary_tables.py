@@ -122,9 +122,20 @@ def _hog(design: Design, face: Face) -> Row:
         case = f"restraint: {short_case(worst_load)}"
     else:
         case = short_case(model.forces.hog(face.support, face.side).case)
-    own = face if "bars-text" in entries else _worst_face(model, face)
-    worst = model.sheet.entries_of(own.key) | bars_of(model.sheet, own.key)
-    return _moment_row(name, case, entries, worst, str(design.top_bars(own) or "none"))
+    own, bars = own_face(model, face), bars_at(model, face)
+    return _moment_row(name, case, entries, bars, str(design.top_bars(own) or "none"))
+
+
+def own_face(model: Model, face: Face) -> Face:
+    """Return the face in whose part the bars of a face are recorded: its own, or the other one."""
+    own = "bars-text" in model.sheet.entries_of(face.key)
+    return face if own else _worst_face(model, face)
+
+
+def bars_at(model: Model, face: Face) -> dict[str, Entry]:
+    """Return the entries of the bars at a face with their resistance, from where they stand."""
+    key = own_face(model, face).key
+    return model.sheet.entries_of(key) | bars_of(model.sheet, key)
 
 
 def _worst_face(model: Model, face: Face) -> Face:

@@ -1,0 +1,72 @@
+"""The figures of the summary say the very values of its tables, in whole flow."""
+
+from __future__ import annotations
+
+from typing import Any
+
+import pytest
+
+from lineproof import beams
+from lineproof.record import Record
+from lineproof.sheet import Sheet
+
+from .flow import record_of
+from .test_edge_beam import NOTEBOOK, PROJECT, inputs_of, make
+
+
+@pytest.fixture(scope="module")
+def floor() -> Record:
+    return record_of()
+
+
+@pytest.fixture(scope="module")
+def edge() -> Record:
+    sheet = Sheet("B12", "Edge beam", project=PROJECT)
+    return make(beams.continuous_beam(sheet, **inputs_of(NOTEBOOK)))[2]
+
+
+def table(record: Record, key: str) -> list[dict[str, str]]:
+    """Return the rows of a table of the summary by column."""
+    made: dict[str, Any] = record.entries[f"summary/{key}"]
+    return [dict(zip(made["columns"], row, strict=True)) for row in made["rows"]]
+
+
+def said(record: Record, key: str) -> str:
+    """Return what a figure of the summary says, minus signs left out."""
+    return str(record.entries[f"summary/{key}"]["alt"]).replace("−", "")
+
+
+@pytest.mark.parametrize("beam", ["floor", "edge"])
+def test_shears_of_the_figure_are_those_of_the_table(
+    beam: str, request: pytest.FixtureRequest
+) -> None:
+    """Every row stands in the figure; cases of one place stand each for itself."""
+    record = request.getfixturevalue(beam)
+    rows = table(record, "shear")
+
+    assert rows
+    for row in rows:
+        assert f"Vf = {row['V_f, kN']}, Vr = {row['V_r, kN']}" in said(record, "shears-1")
+    assert said(record, "shears-1").count("Vf =") <= len(rows)
+
+
+@pytest.mark.parametrize("beam", ["floor", "edge"])
+def test_moments_of_the_figure_are_those_of_the_table(
+    beam: str, request: pytest.FixtureRequest
+) -> None:
+    """Every row stands in the figure, that of a restraint by name."""
+    record = request.getfixturevalue(beam)
+    rows = table(record, "flexure")
+
+    for row in rows:
+        found = f"Mf = {row['M_f, kN.m']}, Mr = {row['M_r, kN.m']}"
+        if row["Load case"].startswith("restraint"):
+            found += ", restraint"
+        assert found in said(record, "moments-1")
+    assert said(record, "moments-1").count("Mf =") == len(rows)
+
+
+def test_deflections_of_the_figure_are_told_from_those_of_the_checks(floor: Record) -> None:
+    """The figure integrates curvatures, the check has one effective moment of inertia."""
+    figure = str(floor.entries["summary/deflected"])
+    assert "Values of the checks: at midspan, by one effective moment of inertia." in figure
