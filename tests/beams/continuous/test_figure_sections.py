@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from itertools import product
 from typing import Any
 
@@ -133,6 +134,57 @@ def test_thickest_bars_stand_in_the_corners() -> None:
 
     assert [c.radius for c in circles] == [12.6, 9.75, 9.75, 12.6]
     assert [c.centre[1] - c.radius for c in circles] == pytest.approx([41.3] * 4)
+
+
+STRING = (
+    BarRun("bottom", 1, 2, "20M", 6000.0, 9000.0),  # inner bars
+    BarRun("bottom", 1, 2, "20M", 0.0, 4250.0),
+    BarRun("bottom", 1, 2, "20M", 3350.0, 12000.0),
+)
+"""Corner bars lapped over 900 mm at 3.80 m, and bars between them further on, written first."""
+
+
+def laid_at(
+    x: float, runs: tuple[BarRun, ...] = STRING, b_w: float = 380.0
+) -> dict[int, list[float]]:
+    """Return where the bars of each run lie across the web at a station, to 0.1 mm."""
+    beam = replace(outline((7600.0, 9200.0)), b_w=b_w)
+    zones = tuple(StirrupZone(k, 0.0, 0.0, 1, 250.0, "10M") for k in (1, 2))
+    steel = steel_at(beam, Detailing(runs, zones), x, 20.0)
+    found: dict[int, list[float]] = {}
+    for run, circle in web_circles(steel):
+        found.setdefault(runs.index(run), []).append(round(circle.centre[0], 1))
+    return {index: sorted(xs) for index, xs in found.items()}
+
+
+def test_corner_bars_stay_in_the_corners() -> None:
+    """The string that reaches furthest stands outside at every section.
+
+    Corner bars: 30 + 11.3 + 22.5 = 63.8 mm from the side, as their place in the bend is. Inner
+    ones at thirds: 63.8 + (380 - 127.6)/3 = 147.9 mm.
+    """
+    assert laid_at(1000.0) == {1: [63.8, 316.2]}
+    assert laid_at(7600.0) == {0: [147.9, 232.1], 2: [63.8, 316.2]}
+    assert laid_at(11000.0) == {2: [63.8, 316.2]}
+
+
+def test_lapped_bars_are_drawn_in_contact() -> None:
+    """63.8 + 19.5 = 83.3 mm: the bar that goes on touches the one that ends, inside it."""
+    assert laid_at(3800.0) == {1: [63.8, 316.2], 2: [83.3, 296.7]}
+
+
+def test_lapped_bars_without_room_lie_one_above_the_other() -> None:
+    """Width 200: 136.2 - 63.8 = 72.4 between the corners, less 3 x 19.5 = 13.9 < 30 mm clear."""
+    assert laid_at(3800.0, b_w=200.0) == {1: [63.8, 136.2], 2: [63.8, 136.2]}
+
+
+def test_an_odd_bar_stands_in_the_middle() -> None:
+    """Three that run through and two between: the third in the middle, the others in pairs."""
+    runs = (
+        BarRun("bottom", 1, 2, "20M", 1000.0, 5000.0),
+        BarRun("bottom", 1, 3, "20M", 0.0, 7600.0),
+    )
+    assert laid_at(3000.0, runs) == {0: [126.9, 253.1], 1: [63.8, 190.0, 316.2]}
 
 
 def test_stirrup_keeps_the_cover() -> None:

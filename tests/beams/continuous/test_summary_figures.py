@@ -10,8 +10,8 @@ from lineproof import beams
 from lineproof.record import Record
 from lineproof.sheet import Sheet
 
-from .flow import record_of
-from .test_edge_beam import NOTEBOOK, PROJECT, inputs_of, make
+from .flow import PROJECT, record_of
+from .test_edge_beam import NOTEBOOK, inputs_of, make
 
 
 @pytest.fixture(scope="module")

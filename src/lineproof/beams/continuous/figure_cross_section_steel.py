@@ -7,24 +7,33 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
-from itertools import groupby
+from itertools import groupby, pairwise
 
 from lineproof.beams.bars import centre_of
 from lineproof.beams.continuous.bending import BentShape, stirrup_radius
 from lineproof.beams.continuous.figure_chain import ahead, outlines
+from lineproof.beams.continuous.figure_cross_section_places import (
+    Place,
+    Strings,
+    places_of,
+    strings_of,
+)
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face, StirrupZone
 from lineproof.beams.continuous.schedule_stirrups import stirrup_set
 from lineproof.beams.figure_section import Shown
 from lineproof.beams.section_shape import SectionShape
 from lineproof.drawing import THIN, Circle, Shape
-from lineproof.standards.a23_3.bars import BARS, LAYER_DISTANCE
+from lineproof.standards.a23_3.bars import BARS, LAYER_DISTANCE, LEAST_CLEAR
 
 STROKE = THIN * 1.3
 
 
 @dataclass(frozen=True, slots=True)
 class Steel:
-    """What stands at a station of a span: runs, the zone of stirrups, the concrete around."""
+    """What stands at a station of a span: runs, the zone of stirrups, the concrete around.
+
+    ``bars`` are all bars of the beam, which tell how the ``strings`` run on.
+    """
 
     outline: BeamOutline
     span: int
@@ -33,6 +42,8 @@ class Steel:
     stirrup: float
     bend: float
     aggregate: float
+    bars: tuple[BarRun, ...]
+    strings: Strings
 
     @property
     def depth(self) -> float:
@@ -57,6 +68,11 @@ class Steel:
         mine = [run for run in self.runs if run.face == face and run.place == "web"]
         mine.sort(key=lambda run: run.layer)
         return [list(runs) for _, runs in groupby(mine, key=lambda run: run.layer)]
+
+    def places_of(self, layer: Sequence[BarRun]) -> tuple[Place, ...]:
+        """Return the places of the runs of a layer from side to side."""
+        present = [i for i, run in enumerate(self.bars) if any(run is each for each in layer)]
+        return places_of(self.bars, present, self.strings)
 
     def rests(self, face: Face) -> list[float]:
         """Return how far from the face the outer side of each layer lies [mm]."""
@@ -99,7 +115,8 @@ def steel_at(
     size = zone.size if zone else stirrup
     diameter = BARS.number(size, "d_b") if size else 0.0
     bend = stirrup_radius(size) if size else 0.0
-    return Steel(outline, span, runs, zone, diameter, bend, aggregate)
+    strings = strings_of(outline, detailing.bars)
+    return Steel(outline, span, runs, zone, diameter, bend, aggregate, detailing.bars, strings)
 
 
 def span_of(outline: BeamOutline, x: float) -> int:
@@ -115,30 +132,53 @@ Placed = list[tuple[BarRun, Circle]]
 
 
 def web_circles(steel: Steel) -> Placed:
-    """Place the bars of each layer over the width, the thickest in the corners."""
+    """Place the bars of each layer over the width: corner bars in the corners, lapped in contact.
+
+    Where there is no room beside it, a lapped bar lies one above the other.
+    """
     placed: Placed = []
     for face in ("bottom", "top"):
         outer: list[float] = []
+        way = 1.0 if face == "bottom" else -1.0
         for layer, rest in zip(steel.layers(face), steel.rests(face), strict=True):
-            bars = _thick_outside([run for run in layer for _ in range(run.number)])
-            places = _across(steel, bars, outer)
-            outer = outer or places
-            for run, x in zip(bars, places, strict=True):
-                inset = rest + run.diameter / 2
+            places = steel.places_of(layer)
+            across = _across(steel, places, outer)
+            outer = outer or across
+            beside = _beside(steel, places, across)
+            for place, x in zip(places, across, strict=True):
+                inset = rest + place.run.diameter / 2
                 y = inset if face == "bottom" else steel.depth - inset
-                placed.append((run, Circle((x, y), run.diameter / 2, "bars")))
+                placed.append((place.run, Circle((x, y), place.run.diameter / 2, "bars")))
+                if place.mate is not None:
+                    apart = (place.run.diameter + place.mate.diameter) / 2
+                    at = (_inward(steel, x, apart), y) if beside else (x, y + way * apart)
+                    placed.append((place.mate, Circle(at, place.mate.diameter / 2, "bars")))
     return placed
 
 
-def _thick_outside(bars: Sequence[BarRun]) -> list[BarRun]:
-    """Order bars so that the thickest stand outside, pair by pair."""
-    order = sorted(bars, key=lambda run: -run.diameter)
-    return [*order[0::2], *reversed(order[1::2])]
+def _inward(steel: Steel, x: float, distance: float) -> float:
+    """Return the place so far towards the middle of the web."""
+    return x + distance if x <= steel.outline.b_w / 2 else x - distance
 
 
-def _across(steel: Steel, bars: Sequence[BarRun], outer: Sequence[float]) -> list[float]:
-    """Return the x of each bar; a second layer stands in line with the first where it can."""
-    count, width = len(bars), steel.outline.b_w
+def _beside(steel: Steel, places: Sequence[Place], across: Sequence[float]) -> bool:
+    """Tell whether lapped bars leave the least clear distance beside them."""
+    edges: list[tuple[float, float]] = []
+    for place, x in zip(places, across, strict=True):
+        sides = [x - place.run.diameter / 2, x + place.run.diameter / 2]
+        if place.mate is not None:
+            far = _inward(steel, x, place.run.diameter / 2 + place.mate.diameter)
+            sides.append(far)
+        edges.append((min(sides), max(sides)))
+    least = LEAST_CLEAR.function(
+        max((place.diameter for place in places), default=0.0), steel.aggregate
+    )
+    return all(b[0] - a[1] >= least for a, b in pairwise(edges))
+
+
+def _across(steel: Steel, places: Sequence[Place], outer: Sequence[float]) -> list[float]:
+    """Return the x of each place; a second layer stands in line with the first where it can."""
+    count, width = len(places), steel.outline.b_w
     if count == 1:
         return [width / 2]
     if len(outer) >= count and (count % 2 == 0 or len(outer) % 2 == 1):
@@ -146,8 +186,8 @@ def _across(steel: Steel, bars: Sequence[BarRun], outer: Sequence[float]) -> lis
         middle = [outer[len(outer) // 2]] if count % 2 else []
         return [*outer[:half], *middle, *outer[len(outer) - half :]]
     edge = steel.cover + steel.stirrup
-    first = edge + max(steel.bend, bars[0].diameter / 2)
-    last = width - edge - max(steel.bend, bars[-1].diameter / 2)
+    first = edge + max(steel.bend, places[0].run.diameter / 2)
+    last = width - edge - max(steel.bend, places[-1].run.diameter / 2)
     return [first + (last - first) * number / (count - 1) for number in range(count)]
 
 
