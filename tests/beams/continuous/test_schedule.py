@@ -14,10 +14,11 @@ from lineproof.beams.continuous.bending import (
     open_stirrup,
     single_leg,
 )
-from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, StirrupZone
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face, StirrupZone
 from lineproof.beams.continuous.quantities import quantities
 from lineproof.beams.continuous.schedule import over_stock, schedule
 from lineproof.beams.continuous.schedule_checks import contradictions
+from lineproof.beams.continuous.schedule_served import served
 from lineproof.beams.continuous.schedule_stirrups import stirrup_set
 from lineproof.beams.continuous.schedule_tables import bar_table, quantity_table, stirrup_table
 from lineproof.errors import UserError
@@ -363,3 +364,26 @@ def test_contradictions_are_told() -> None:
     assert contradictions(BEAM, Detailing((), (ties,))) == ()
     (outside,) = contradictions(BEAM, Detailing((), (replace(ties, start=-325.0, number=5),)))
     assert "from -325 to -25 mm reaches outside the concrete" in outside
+
+
+def test_pieces_of_a_string_are_for_what_they_reach() -> None:
+    """Spans of 7.6, 9.2 and 7.6 m: corner bars in pieces, each for its own supports and spans.
+
+    Top: 0 to 4.25 m crosses axis 1 alone, 3.35 to 12.65 m axis 2 at 7.6, 11.75 to 21.05 m axis 3
+    at 16.8. Bottom: to 7.95 m, 0.35 m past axis 2, is a lap, not a bar for span 2; to 12.0 m
+    covers half of it.
+    """
+    whole = ", ".join(f"support {number}" for number in range(1, 5))
+
+    def of(face: Face, start: float, end: float, serves: str) -> str:
+        return served(outline(), BarRun(face, 1, 2, "20M", start, end, serves=serves))
+
+    assert of("top", -150.0, 4250.0, whole) == "support 1"
+    assert of("top", 3350.0, 12650.0, whole) == "support 2"
+    assert of("top", 3350.0, 21050.0, whole) == "support 2, support 3"
+    assert of("top", -150.0, 4250.0, f"{whole}, holds the stirrups") == (
+        "support 1, holds the stirrups"
+    )
+    assert of("bottom", -150.0, 7950.0, "spans 1 to 3") == "span 1"
+    assert of("bottom", -150.0, 12000.0, "spans 1 to 3") == "spans 1 to 2"
+    assert of("top", 20000.0, 21700.0, "support 4") == "support 4"  # as it was said

@@ -11,6 +11,7 @@ from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.bending import BentShape, bent_bar, rounded
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, StirrupZone
+from lineproof.beams.continuous.schedule_served import served
 from lineproof.beams.continuous.schedule_stirrups import StirrupSet, stirrup_set
 from lineproof.standards.a23_3.bars import BARS
 
@@ -71,7 +72,7 @@ class Schedule:
 
 def schedule(outline: BeamOutline, detailing: Detailing, grade: str = "400R") -> Schedule:
     """Return the schedule of a beam; ``grade`` gives the bend diameters of bars."""
-    bars, runs = _bars(detailing.bars, grade)
+    bars, runs = _bars(outline, detailing.bars, grade)
     sets = [stirrup_set(outline, zone) for zone in sorted(detailing.stirrups, key=_zone_place)]
     marks = _numbered("S", (shape for each in sets for shape, _ in each.pieces))
     numbers: dict[str, int] = dict.fromkeys(marks.values(), 0)
@@ -124,7 +125,9 @@ def _numbered(letter: str, shapes: Iterable[BentShape]) -> dict[BentShape, str]:
     return marks
 
 
-def _bars(runs: Sequence[BarRun], grade: str) -> tuple[tuple[BarItem, ...], tuple[BarRun, ...]]:
+def _bars(
+    outline: BeamOutline, runs: Sequence[BarRun], grade: str
+) -> tuple[tuple[BarItem, ...], tuple[BarRun, ...]]:
     """Return the lines of the schedule and the runs with their marks, in the order given."""
     items: list[BarItem] = []
     named: dict[int, str] = {}
@@ -136,7 +139,8 @@ def _bars(runs: Sequence[BarRun], grade: str) -> tuple[tuple[BarItem, ...], tupl
             same = [index for index in mine if shapes[index] == shape]
             named.update(dict.fromkeys(same, mark))
             number = sum(runs[index].number for index in same)
-            serves = tuple(dict.fromkeys(runs[i].serves for i in same if runs[i].serves))
+            texts = (served(outline, runs[i]) for i in same)
+            serves = tuple(dict.fromkeys(text for text in texts if text))
             items.append(BarItem(mark, shape.size, number, shape, serves))
     marked = tuple(replace(run, mark=named[index]) for index, run in enumerate(runs))
     return tuple(items), marked
