@@ -73,10 +73,14 @@ def choose_scale(shape: SectionShape, room: float, tallest: float = TALLEST_SECT
     return Shown(min(left, stub), min(right, stub), 1.0 / ratio, shortened=sides > 0)
 
 
-def outline(shape: SectionShape, shown: Shown) -> list[Shape]:
-    """Draw the concrete: web from x = 0 to b_w, soffit at y = 0; break lines where shortened."""
+def outline(shape: SectionShape, shown: Shown, *, goes_on: bool = False) -> list[Shape]:
+    """Draw the concrete: web from x = 0 to b_w, soffit at y = 0.
+
+    Break lines end a flange that is shortened, or whose slab ``goes_on`` beyond what counts.
+    """
     points = outline_points(shape, shown)
-    if not shown.shortened:
+    slab = shown.left > 0.0 or shown.right > 0.0
+    if not shown.shortened and not (goes_on and slab):
         return [Polyline(points, closed=True)]
     x0, x1 = -shown.left, shape.b_w + shown.right
     soffit = shape.h - shape.h_f

@@ -229,6 +229,23 @@ def test_section_says_what_it_shows() -> None:
     assert "open stirrups 10M at 125 mm, 2 legs" in figure.alt
 
 
+def test_slab_goes_on_beyond_its_effective_width() -> None:
+    """An L section of 300 by 600 and a flange of 900 drawn whole: a break line ends the slab.
+
+    No closed outline, and at the outer edge no straight line from soffit to top.
+    """
+    beam = replace(outline((7600.0,), shape="L"), b_w=300.0, widths=(900.0,), depths=(600.0,))
+    figure = section_at(beam, Detailing((), ()), 3800.0)
+    concrete = [s for s in figure.shapes if isinstance(s, Polyline) and s.layer == "concrete"]
+    (edge,) = [s for s in concrete if all(abs(x - 900.0) < 50.0 for x, _ in s.points)]
+
+    assert "flange shortened" not in " ".join(words_of(figure))
+    assert not any(s.closed for s in concrete)
+    assert len({x for x, _ in edge.points}) == 3  # the jog to both sides
+    assert min(y for _, y in edge.points) < 600.0 - beam.h_f
+    assert max(y for _, y in edge.points) > 600.0
+
+
 def test_section_without_steel() -> None:
     """A station without bars and stirrups is drawn as plain concrete, without d."""
     figure = section_at(BEAM, Detailing((), ()), 3800.0)

@@ -83,7 +83,7 @@ def section_at(
     first = max(first, shown.right * shown.scale + 6.0)
     drawn = [circle for _, circle in (*circles, *flange, *sides)]
     shapes: list[Shape] = [
-        *outline(shape, shown),
+        *outline(shape, shown, goes_on=True),
         *stirrup_shapes(steel),
         *drawn,
         *_dimensions(shape, shown, steel, first, tension, [circle for _, circle in circles]),
