@@ -300,6 +300,7 @@ def test_loads_stand_at_their_places() -> None:
         words_of(figure)
     )
     assert "dead: 45.0 kN at 3.80 (B12)" in figure.alt
+    assert any("places from the left end of the span, in m" in text for text in words_of(figure))
 
 
 def test_equal_loads_of_neighbours_are_one() -> None:
@@ -308,6 +309,7 @@ def test_equal_loads_of_neighbours_are_one() -> None:
     loads = [UniformLoad("L", span, 12.0 if span < 4 else 15.0) for span in range(1, 5)]
     said = words_of(loads_figure(lengths, supports, loads))
 
+    assert not any("places" in text for text in said)  # uniform loads have none
     assert said.count("12.0 kN/m") == 1
     assert said.count("15.0 kN/m") == 1
 

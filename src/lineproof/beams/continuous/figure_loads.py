@@ -107,7 +107,9 @@ def loads_figure(
         Dimension((a, pen.mm(FOOT - 6.0)), (b, pen.mm(FOOT - 6.0)), "horizontal", -4.0)
         for a, b in pairwise(axes)
     ]
-    note = "Spans in mm; loads not to scale; places from the left end of the span, in m."
+    note = "Spans in mm; loads not to scale"
+    placed_loads = any(not isinstance(load, UniformLoad) for load in loads)
+    note += "; places from the left end of the span, in m." if placed_loads else "."
     shapes.append(Text(pen.at(2.0, 2.2), words(note), "text", 2.6, "start"))
     spans = ", ".join(f"{length:.0f}" for length in lengths)
     alt = f"Beam of spans {spans} mm. " + ". ".join(lanes) + "."
