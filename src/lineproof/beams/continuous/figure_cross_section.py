@@ -237,6 +237,9 @@ def _callouts(shape: SectionShape, shown: Shown, names: Sequence[Named], way: fl
     for name, y in zip(names, spread(wanted, gap, floor, ceiling), strict=True):
         start = (face + way * (REACH - 1.3) * unit, y)
         at = (start[0] + way * 0.8 * unit, y)
+        over = way > 0.0 and name.target[0] > at[0] and name.target[1] > y
+        if over:  # a bar over the name, in the flange: from the top of the text
+            start = (at[0] + 1.5 * unit, y + (TEXT_SIZE / 2 + 0.5) * unit)
         shapes.append(Arrow(start, name.target, "text", THIN, 1.3))
         shapes.append(Text(at, name.runs, "text", anchor="end" if way < 0.0 else "start"))
     return shapes
