@@ -8,10 +8,11 @@ from itertools import pairwise, product
 import pytest
 
 from lineproof.beams.continuous.figure_elevation import elevation_figure, elevation_figures
+from lineproof.beams.continuous.figure_elevation_gaps import Short
 from lineproof.beams.continuous.figure_elevation_view import parts
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, StirrupZone
 from lineproof.beams.continuous.schedule import schedule
-from lineproof.drawing import OUTLINE, Arc, Dimension, Figure, Line, Text
+from lineproof.drawing import OUTLINE, Arc, Circle, Dimension, Figure, Line, Text
 
 from .by_hand import COLUMN, FREE_END, GIRDER, detailing, outline, random_beam
 from .print_checks import assert_readable, plain, words_of
@@ -137,9 +138,65 @@ def test_cut_off_lengths() -> None:
 
     assert sizes[7600, 2280] == 4  # two layers at each side, T02 and the bars in the flange
     assert sizes[7600, 1368] == 2
-    assert sizes[0, 175] == 1  # bottom bars reach 225 - 50 mm past the axis
+    assert sizes[0, 175] == 2  # bottom bars and hooked top bars reach 225 - 50 mm past the axis
     assert sizes[7600, 300] == 2
     assert sizes[7600, 900] == 2
+
+
+def test_both_lengths_of_a_short_bar_at_an_end_are_given() -> None:
+    """2.00 m into the span and 150 mm past the axis: the shorter stands under the longer."""
+    beam = outline((7600.0, 9200.0, 7600.0), left=GIRDER)
+    bars = Detailing((BarRun("top", 1, 2, "20M", -150.0, 2000.0, "overhang", "90"),), ())
+    figure = elevation_figure(beam, schedule(beam, bars).detailing)
+    cuts = {
+        round(s.measured): s.offset for s in figure.shapes
+        if isinstance(s, Dimension) and s.size == 2.3 and not s.symbol
+    }  # fmt: skip
+
+    assert set(cuts) == {150, 2000}
+    assert cuts[150] < cuts[2000] - 2.3  # lower by more than the height of the text
+    assert_readable(figure, SOLID)
+
+
+def test_names_of_stirrups_stand_clear_of_the_axes() -> None:
+    """The upright names and their axes: at least half the text of 2.3 mm apart."""
+    for lengths in (LENGTHS[:3], LENGTHS, (3000.0,) * 6):
+        beam = outline(lengths)
+        figure = elevation_figure(beam, marked(beam))
+        axes = [x * figure.scale for x in beam.axes]
+        names = [s.at[0] * figure.scale for s in figure.shapes
+                 if isinstance(s, Text) and s.rotation == 90.0]  # fmt: skip
+        assert all(abs(x - axis) > 1.15 for x in names for axis in axes)
+
+
+def test_letters_stand_clear_of_the_axes() -> None:
+    """A cut at the left face of a support: its letter goes to the left of the arrow."""
+    figure = elevation_figure(BEAM, marked(BEAM), sections=(("C", 7375.0), ("D", 7825.0)))
+    at = {plain(s): s for s in figure.shapes if isinstance(s, Text) and plain(s) in {"C", "D"}}
+
+    assert (at["C"].anchor, at["D"].anchor) == ("end", "start")
+    assert at["C"].at[0] < 7375.0
+    assert at["D"].at[0] > 7825.0
+
+
+def test_places_of_short_hatching_stand_in_the_note() -> None:
+    """0.30 m is 2 mm on paper, too short for its place; 3.00 m has room for it."""
+    short = (Short("top", 1, 7075.0, 7375.0, "7.08 to 7.38"), Short("top", 2, 9600.0, 12600.0,
+             "2.00 to 5.00"))  # fmt: skip
+    figure = elevation_figure(BEAM, marked(BEAM), short=short)
+    (note,) = [text for text in words_of(figure) if "7.08" in text]
+
+    assert note.endswith("top of span 1, 7.08 to 7.38.")
+    assert "2.00 to 5.00" in words_of(figure)
+    assert_readable(figure)
+
+
+def test_supports_are_named_in_words() -> None:
+    """Bubbles are the names of grid lines; supports that stand too close have numbers alone."""
+    assert {f"support {number}" for number in range(1, 5)} <= set(words_of(elevation()))
+    assert not any(isinstance(s, Circle) for s in elevation().shapes)
+    close = words_of(elevation_figure(beam := outline((800.0, 30000.0)), marked(beam)))
+    assert {"1", "2", "3"} <= set(close)
 
 
 def test_spans_are_dimensioned() -> None:

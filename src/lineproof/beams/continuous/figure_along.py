@@ -7,6 +7,8 @@ from dataclasses import dataclass
 from typing import TypeVar
 
 from lineproof.beams.continuous.figure_rows import in_rows
+from lineproof.beams.continuous.figure_support_names import SIZE as NAME
+from lineproof.beams.continuous.figure_support_names import support_names
 from lineproof.beams.continuous.layout import BeamOutline
 from lineproof.drawing import (
     LIGHT,
@@ -125,7 +127,7 @@ def along_figure(outline: BeamOutline, data: Along, caption: str) -> Figure:
         *_draw_legend(legend, foot),
     ]
     return Figure(
-        WIDTH, round(head + 6.0, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(data, caption), caption
+        WIDTH, round(head + 4.5, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(data, caption), caption
     )
 
 
@@ -184,8 +186,10 @@ def _frame(
 
 
 def _supports(axes: Axes, outline: BeamOutline, numbers: Sequence[int], head: float) -> list[Shape]:
-    """Mark axes (chain) and faces (dotted) of supports, with their numbers at the head."""
+    """Mark axes (chain) and faces (dotted) of supports, with their names at the head."""
     low, high = axes.bottom, axes.bottom + axes.height
+    held = [number for number in numbers if outline.supports[number - 1].kind != "free"]
+    middles = [axes.at(outline.axes[number - 1], 0.0)[0] for number in held]
     shapes: list[Shape] = []
     for number in numbers:
         x, half = outline.axes[number - 1], outline.supports[number - 1].half
@@ -195,9 +199,10 @@ def _supports(axes: Axes, outline: BeamOutline, numbers: Sequence[int], head: fl
                 shapes.append(Line((at, low), (at, high), "centre", THIN, "dotted"))
         at = axes.at(x, 0.0)[0]
         shapes.append(Line((at, low), (at, high), "centre", THIN, "chain"))
-        if outline.supports[number - 1].kind != "free":
-            shapes.append(Circle((at, head + 2.6), 2.4, "centre", LIGHT, "white"))
-            shapes.append(Text((at, head + 2.6), words(str(number)), "centre", 2.8, backing=False))
+    shapes += [
+        Text((x, head + 2.0), name, "centre", NAME)
+        for name, x in support_names(held, middles, 1.0, WIDTH - 0.5)
+    ]
     return shapes
 
 

@@ -11,8 +11,7 @@ from lineproof.beams.continuous.figure_elevation_bars import (
     pulled_bars,
 )
 from lineproof.beams.continuous.figure_elevation_concrete import STUB, axis_lines, concrete
-from lineproof.beams.continuous.figure_elevation_gaps import NOTE as SHORT
-from lineproof.beams.continuous.figure_elevation_gaps import Short, gap_shapes, shown
+from lineproof.beams.continuous.figure_elevation_gaps import Short, gap_notes, gap_shapes, shown
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, parts, view
 from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
@@ -23,10 +22,12 @@ from lineproof.quantity.digits import fixed
 
 TOP_ROW = 5.0
 """Where the rows of top bars begin over the beam, mm on paper."""
-BUBBLE = 2.4
-NOTE = 2.6
-NOTE_LINES = {1: (16.5, 3.6), 2: (16.5, 3.6), 3: (15.6, 3.3)}
-"""How far below the bars the first of so many notes stands and the next follows, mm on paper."""
+HEAD = 4.5
+"""Room for the names of the supports over the rows of bars, mm on paper."""
+NOTE, LETTER = 2.6, 2.8
+MANY = 3
+FEW_LINES, MANY_LINES = (16.5, 3.6), (15.6, 3.3)
+"""How far below the bars the first of the notes stands and the next follows, mm on paper."""
 Section = tuple[str, float]
 """Letter of a section and its station [mm]."""
 
@@ -72,7 +73,7 @@ def elevation_figure(
     lows, floor = levels(rows_down, first_low, -1)
     notes = _note_lines(seen, detailing, short)
     shapes = [
-        *axis_lines(seen, ceiling, floor - 11.0, BUBBLE),
+        *axis_lines(seen, ceiling, floor - 11.0),
         *concrete(seen),
         *stirrup_lines(seen, detailing.stirrups),
         *bars_in_place(seen, detailing.bars, outline.cover),
@@ -84,10 +85,10 @@ def elevation_figure(
         *_spans(seen, floor),
         *_notes(seen, notes, floor),
     ]
-    bottom = 24.0 - floor
+    bottom = 24.0 - floor + MANY_LINES[1] * max(len(notes) - MANY, 0)
     return Figure(
         PAGE_WIDTH,
-        round(bottom + ceiling + 2 * BUBBLE + 1.5, 1),
+        round(bottom + ceiling + HEAD, 1),
         seen.scale,
         (round(seen.left - seen.low * seen.scale, 4), round(bottom, 1)),
         tuple(shapes),
@@ -116,12 +117,19 @@ def _section_marks(seen: View, sections: Sequence[Section]) -> list[Shape]:
                 (x, height + seen.mm(2.4)), (x - seen.mm(2.6), height + seen.mm(2.4)),
                 "dimensions", LIGHT, 1.4,
             ),
-            Text(
-                (x + seen.mm(0.9), height + seen.mm(1.6)), ((letter, "bold"),), "text", 2.8,
-                "start",
-            ),
+            _letter(seen, letter, x, height),
         ]  # fmt: skip
     return shapes
+
+
+def _letter(seen: View, letter: str, x: float, height: float) -> Text:
+    """Return the letter right of its mark, or left of the arrow where an axis stands there."""
+    runs = ((letter, "bold"),)
+    width = seen.mm(text_width(runs, LETTER) + 0.5)
+    right, left = x + seen.mm(0.9), x - seen.mm(3.2)
+    crossed = any(right - seen.mm(0.5) < axis < right + width for axis in seen.outline.axes)
+    at, anchor = (left, "end") if crossed else (right, "start")
+    return Text((at, height + seen.mm(1.6)), runs, "text", LETTER, anchor)
 
 
 def _spans(seen: View, floor: float) -> list[Shape]:
@@ -147,19 +155,21 @@ def _note_lines(seen: View, detailing: Detailing, short: Sequence[Short]) -> lis
     legs = {zone.legs for zone in detailing.stirrups if zone.span in seen.spans}
     forms = " and ".join("closed" if each else "open" for each in sorted(closed))
     scale = f"Dimensions in mm, scale 1 : {seen.ratio:g}."
-    drawn = "Bars are drawn apart from the beam, with cut lengths; their ends are dimensioned from"
-    lines = [f"{scale} {drawn} the support axes."]
+    drawn = (
+        "Bars are drawn apart, with cut lengths (up to 10 mm longer); their ends are dimensioned"
+    )
+    lines = [f"{scale} {drawn} from the support axes."]
     if closed:
         count = ", ".join(map(str, sorted(legs)))
         lines.append(
             f"Stirrups: {forms}, {count} legs; number, size, spacing, mark, and the distance from "
             "the first to the last stirrup of a zone."
         )
-    return [*lines, SHORT] if shown(seen, short) else lines
+    return [*lines, *gap_notes(seen, short, NOTE, PAGE_WIDTH - 3.0)]
 
 
 def _notes(seen: View, lines: Sequence[str], floor: float) -> list[Shape]:
-    first, step = NOTE_LINES[len(lines)]
+    first, step = FEW_LINES if len(lines) < MANY else MANY_LINES
     return [
         Text(seen.at(1.0, floor - first - step * number), words(line), "text", NOTE, "start")
         for number, line in enumerate(lines)

@@ -37,6 +37,8 @@ LABEL = 2.5
 OVER_BAR, OVER_HOOK = 1.25, 3.6
 UNDER_BAR, UNDER_HOOK = 3.5, 5.3
 """Heights of labels over and of dimensions under a bar, without and with a hook in their way."""
+LOWER = 3.4
+"""From one dimension of cut-off lengths to the one under it."""
 LABEL_TOP, ROW_GAP = 1.8, 2.2
 HOOK, ROUND = 2.4, 0.8
 APART = 1.6
@@ -124,7 +126,8 @@ def _label(run: BarRun, grade: str) -> Runs:
 def height_of(row: Sequence[Pulled]) -> tuple[float, float]:
     """Return how far a row reaches over and under its bars, mm on paper."""
     up = max(bar.rise for bar in row) + LABEL_TOP
-    return up, max(bar.drop for bar in row) + 1.0
+    lower = {bar.drop + LOWER for bar in row if any(cut.lower for cut in bar.cuts)}
+    return up, max(*lower, *(bar.drop for bar in row), 0.0) + 1.0
 
 
 def levels(rows: Sequence[Sequence[Pulled]], first: float, way: int) -> tuple[list[float], float]:
@@ -196,7 +199,8 @@ def _break(view: View, x: float, y: float) -> Polyline:
 
 def _cut_dimension(cut: Cut, y: float, drop: float) -> Dimension:
     ends = (cut.axis, y), (cut.end, y)
-    return Dimension(*ends, "horizontal", -drop, size=NUMBER, outside=cut.outside)
+    offset = -drop - (LOWER if cut.lower else 0.0)
+    return Dimension(*ends, "horizontal", offset, size=NUMBER, outside=cut.outside)
 
 
 def bars_in_place(view: View, bars: Sequence[BarRun], cover: float) -> list[Shape]:

@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from lineproof.beams.continuous.figure_elevation_view import View
+from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
+from lineproof.beams.continuous.figure_support_names import SIZE as NAME
+from lineproof.beams.continuous.figure_support_names import support_names
 from lineproof.drawing import (
     LIGHT,
     MEDIUM,
     THIN,
-    Circle,
     Line,
     Point,
     Polyline,
@@ -18,6 +19,8 @@ from lineproof.drawing import (
 STUB = 4.5
 """Height of the column or wall drawn below the soffit, mm on paper."""
 CONCRETE = 0.35
+NAME_OVER = 2.0
+"""Height of the names of supports over the axis lines, mm on paper."""
 
 
 def concrete(view: View) -> list[Shape]:
@@ -123,18 +126,19 @@ def _break_down(view: View, x: float, depth: float) -> Polyline:
     return Polyline(points, weight=LIGHT)
 
 
-def axis_lines(view: View, ceiling: float, floor: float, radius: float) -> list[Shape]:
-    """Draw the axes of supports from ``floor`` to ``ceiling`` (paper) with their numbers."""
-    shapes: list[Shape] = []
-    for number in view.supports:
-        x = view.outline.axes[number - 1]
-        top = view.mm(ceiling)
-        shapes.append(Line((x, view.mm(floor)), (x, top), "centre", THIN, "chain"))
-        if view.outline.supports[number - 1].kind == "free":
-            continue
-        centre = (x, top + view.mm(radius))
-        shapes += [
-            Circle(centre, view.mm(radius), "centre", LIGHT, "white"),
-            Text(centre, ((str(number), "roman"),), "centre", 2.8, backing=False),
-        ]
-    return shapes
+def axis_lines(view: View, ceiling: float, floor: float) -> list[Shape]:
+    """Draw the axes of supports from ``floor`` to ``ceiling`` (paper) with their names."""
+    axes, supports = view.outline.axes, view.outline.supports
+    shapes: list[Shape] = [
+        Line(
+            (axes[number - 1], view.mm(floor)), (axes[number - 1], view.mm(ceiling)),
+            "centre", THIN, "chain",
+        )
+        for number in view.supports
+    ]  # fmt: skip
+    held = [number for number in view.supports if supports[number - 1].kind != "free"]
+    middles = [view.paper(axes[number - 1]) for number in held]
+    return shapes + [
+        Text(view.at(x, ceiling + NAME_OVER), name, "centre", NAME)
+        for name, x in support_names(held, middles, 0.5, PAGE_WIDTH - 0.5)
+    ]

@@ -25,13 +25,15 @@ Side = Literal["start", "end"]
 class Cut:
     """A cut-off length between a support axis and an end of a bar.
 
-    ``outside`` is the side at which its text stands if it does not fit between.
+    ``outside`` is the side at which its text stands if it does not fit between. ``lower`` tells
+    that it stands under the other one.
     """
 
     axis: float
     end: float
     hook: Hook
     outside: Side
+    lower: bool = False
 
     @property
     def length(self) -> float:
@@ -59,8 +61,9 @@ class Cut:
 def cut_lengths(view: View, run: BarRun, short: Sequence[Short] = ()) -> tuple[Cut, ...]:
     """Return the cut-off lengths of a run, from the nearest axes, with places for their texts.
 
-    Where two cannot stand beside each other one is enough, since the length of the bar is
-    printed: the one in a stretch that is ``short`` of bars, the one without a hook, the shorter.
+    Where two cannot stand beside each other the shorter stands lower if both are from one axis;
+    of others one is enough, since the length of the bar is printed: the one in a stretch that is
+    ``short`` of bars, the one without a hook, the shorter.
     """
 
     def rank(cut: Cut) -> tuple[bool, bool, float]:
@@ -71,6 +74,10 @@ def cut_lengths(view: View, run: BarRun, short: Sequence[Short] = ()) -> tuple[C
     best = _placed(view, run, cuts)
     if best is not None:
         return best
+    if len(cuts) > 1 and cuts[0].axis == cuts[1].axis:
+        apart = _one_under_the_other(view, run, cuts)
+        if apart is not None:
+            return apart
     for cut in sorted(cuts, key=rank):
         alone = _placed(view, run, (cut,))
         if alone is not None:
@@ -95,6 +102,13 @@ def _nearest(
         if same_side:
             return (min(cuts, key=lambda cut: (rank(cut)[0], cut.length)),)
     return cuts
+
+
+def _one_under_the_other(view: View, run: BarRun, cuts: tuple[Cut, ...]) -> tuple[Cut, ...] | None:
+    """Place two lengths at different heights, the shorter lower; none if one finds no place."""
+    long, short = sorted(cuts, key=lambda cut: -cut.length)
+    upper, lower = _placed(view, run, (long,)), _placed(view, run, (replace(short, lower=True),))
+    return None if upper is None or lower is None else (*upper, *lower)
 
 
 def _placed(view: View, run: BarRun, cuts: tuple[Cut, ...]) -> tuple[Cut, ...] | None:

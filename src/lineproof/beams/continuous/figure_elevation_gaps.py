@@ -19,7 +19,7 @@ BAND = 1.5
 SIZE = 2.3
 NOTE = (
     "Hatched: the bars of that face are not enough there, or none count; places in m from the left "
-    "axis of the span."
+    "axis of the span"
 )
 
 
@@ -52,8 +52,35 @@ def gap_shapes(view: View, stretches: Sequence[Short]) -> list[Shape]:
         inner = edge + inward * view.mm(BAND)
         corners = ((each.start, edge), (each.end, edge), (each.end, inner), (each.start, inner))
         shapes.append(Polyline(corners, weight=THIN, closed=True, fill="hatch"))
-        width = text_width(words(each.text), SIZE) + FIT_MARGIN
-        if width <= (each.end - each.start) * view.scale:
+        if _fits(view, each):
             at = (each.start + each.end) / 2, inner + inward * view.mm(SIZE / 2 + 0.6)
             shapes.append(Text(at, words(each.text), "text", SIZE))
     return shapes
+
+
+def _fits(view: View, each: Short) -> bool:
+    """Tell whether the place stands beside the hatching."""
+    width = text_width(words(each.text), SIZE) + FIT_MARGIN
+    return width <= (each.end - each.start) * view.scale
+
+
+def gap_notes(view: View, stretches: Sequence[Short], size: float, room: float) -> list[str]:
+    """Return the note on what is hatched, with the places that do not stand beside it, in lines.
+
+    ``size`` of the text and ``room`` of a line are in mm on paper.
+    """
+    hatched = shown(view, stretches)
+    if not hatched:
+        return []
+    places = [
+        f"{each.face} of span {each.span}, {each.text}" for each in hatched if not _fits(view, each)
+    ]
+    text = f"{NOTE}: {'; '.join(places)}." if places else f"{NOTE}."
+    lines = [""]
+    for word in text.split():
+        longer = f"{lines[-1]} {word}".strip()
+        if text_width(words(longer), size) <= room:
+            lines[-1] = longer
+        else:
+            lines.append(word)
+    return lines

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
-from lineproof.beams.continuous.figure_rows import side_by_side
+from lineproof.beams.continuous.figure_rows import between
 from lineproof.beams.continuous.layout import StirrupZone, places_of
 from lineproof.drawing import MEDIUM, THIN, Line, Runs, Shape, Text
 from lineproof.drawing.axes import spread
@@ -48,14 +48,16 @@ def zone_block(view: View, zones: Sequence[StirrupZone], top: float) -> tuple[li
             for x in ends
         ]
     middles = [view.paper((zone.start + zone.end) / 2) for zone in shown]
-    places = _in_one_row([_names(zone) for zone in shown], middles)
+    axes = [view.paper(view.outline.axes[number - 1]) for number in view.supports]
+    places = _in_one_row([_names(zone) for zone in shown], middles, axes)
     if places:
         for zone, middle, place in zip(shown, middles, places, strict=True):
             shapes += _flat(view, zone, middle, place, y)
         return shapes, 10.6
     names = [_one_line(zone) for zone in shown]
     longest = max(text_width(name, SIZE) for name in names)
-    beside = spread(middles, SIZE + 0.7, 2.0, PAGE_WIDTH - 2.0)
+    beside = between([SIZE] * len(names), middles, 0.85, PAGE_WIDTH - 0.85, axes, 0.7)
+    beside = beside or spread(middles, SIZE + 0.7, 2.0, PAGE_WIDTH - 2.0)
     for name, middle, place in zip(names, middles, beside, strict=True):
         start = view.at(middle, y - 0.4), view.at(place, y - 1.9)
         shapes.append(Line(*start, "dimensions", THIN))
@@ -86,10 +88,12 @@ def _one_line(zone: StirrupZone) -> Runs:
     return (*mark, (f"{_count(zone)}{length}{ties}", "roman"))
 
 
-def _in_one_row(names: Sequence[tuple[Runs, Runs]], middles: Sequence[float]) -> list[float]:
-    """Places of the names in one row, moved apart; none if one would stand too far away."""
+def _in_one_row(
+    names: Sequence[tuple[Runs, Runs]], middles: Sequence[float], axes: Sequence[float]
+) -> list[float]:
+    """Places of the names in one row, clear of the axes; none if one would stand too far away."""
     widths = [max(text_width(line, SIZE) for line in lines) for lines in names]
-    places = side_by_side(widths, middles, 0.5, PAGE_WIDTH - 0.5, APART)
+    places = between(widths, middles, 0.5, PAGE_WIDTH - 0.5, axes, APART)
     near = all(abs(a - b) <= FARTHEST for a, b in zip(places, middles, strict=False))
     return places if near else []
 

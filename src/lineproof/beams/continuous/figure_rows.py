@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from bisect import bisect_left
 from collections.abc import Sequence
 from itertools import pairwise
 
@@ -42,6 +43,45 @@ def side_by_side(
     for index, place in zip(order, places, strict=True):
         result[index] = round(place, 6)
     return result
+
+
+def between(
+    widths: Sequence[float],
+    wanted: Sequence[float],
+    low: float,
+    high: float,
+    lines: Sequence[float],
+    apart: float = APART,
+) -> list[float]:
+    """Return the middles of texts in one row that stand clear of upright ``lines`` as well.
+
+    Each stays on its side of a line; those outside the outer lines may move inside. An empty list
+    tells that there is no room.
+
+    >>> between([4.0, 4.0], [9.0, 11.0], 0.0, 30.0, [10.0], 2.0)
+    [7.0, 13.0]
+    """
+    groups: list[list[int]] = [[] for _ in range(len(lines) + 1)]
+    for index, x in enumerate(wanted):
+        groups[bisect_left(lines, x)].append(index)
+    edges = [low - apart / 2, *lines, high + apart / 2]
+    rooms = [(a + apart / 2, b - apart / 2) for a, b in pairwise(edges)]
+    for outer, inner in ((0, 1), (len(lines), len(lines) - 1)) if lines else ():
+        needed = sum(widths[i] + apart for i in groups[outer]) - apart
+        if needed > rooms[outer][1] - rooms[outer][0]:
+            groups[inner] += groups[outer]
+            groups[outer] = []
+    made = [0.0] * len(widths)
+    for group, (start, end) in zip(groups, rooms, strict=True):
+        group.sort()
+        found = side_by_side(
+            [widths[i] for i in group], [wanted[i] for i in group], start, end, apart
+        )
+        if len(found) < len(group):
+            return []
+        for index, place in zip(group, found, strict=True):
+            made[index] = place
+    return made
 
 
 def _pushed(
