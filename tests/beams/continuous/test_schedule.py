@@ -384,6 +384,9 @@ def test_pieces_of_a_string_are_for_what_they_reach() -> None:
     assert of("top", -150.0, 4250.0, f"{whole}, holds the stirrups") == (
         "support 1, holds the stirrups"
     )
+    assert of("top", 3350.0, 12650.0, f"holds the stirrups, {whole}") == (
+        "support 2, holds the stirrups"
+    )
     assert of("bottom", -150.0, 7950.0, "spans 1 to 3") == "span 1"
     assert of("bottom", -150.0, 12000.0, "spans 1 to 3") == "spans 1 to 2"
     assert of("top", 20000.0, 21700.0, "support 4") == "support 4"  # as it was said

@@ -45,7 +45,8 @@ def _reached(outline: BeamOutline, run: BarRun, part: str) -> bool:
 
 
 def _together(parts: list[str]) -> list[str]:
-    """Write spans that follow one another as ``spans 1 to 3``."""
+    """Write places first, spans that follow one another as ``spans 1 to 3``."""
+    parts = sorted(parts, key=lambda part: _PLACE.fullmatch(part) is None)
     spans = [part for part in parts if part.startswith("span ")]
     if len(spans) < 2:  # noqa: PLR2004 - one span stands for itself
         return parts
