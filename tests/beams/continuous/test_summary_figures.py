@@ -70,3 +70,11 @@ def test_deflections_of_the_figure_are_told_from_those_of_the_checks(floor: Reco
     """The figure integrates curvatures, the check has one effective moment of inertia."""
     figure = str(floor.entries["summary/deflected"])
     assert "Values of the checks: at midspan, by one effective moment of inertia." in figure
+
+
+def test_tables_of_envelopes_say_what_they_leave_out(floor: Record, edge: Record) -> None:
+    """Girders at supports 1 and 4 restrain the floor beam; the edge beam is held by columns."""
+    for part in ("coverage", "summary"):
+        text = str(floor.entries[f"{part}/restraint"]["text"])
+        assert text.startswith("The moment of restraint at supports 1 and 4 is of no load case")
+        assert f"{part}/restraint" not in edge.entries

@@ -32,6 +32,7 @@ from lineproof.beams.continuous.resistance_station import (
     record_moment,
     record_tension,
 )
+from lineproof.beams.continuous.restraint import left_out
 from lineproof.record import Entry
 
 SHOWN = 11
@@ -104,6 +105,8 @@ def _record_table(
             title="Moments in kN.m against the resistance as detailed; ratio: moment or tension",
             rests_on=_checks(writers),
         )  # fmt: skip
+        if writers.designed.restrained:
+            sheet.note("restraint", left_out(writers.designed.restrained), title="Restraint")
         for number, gap in enumerate(found.gaps, 1):
             sheet.note(f"gap-{number}", f"{gap}.", title="NOT covered")
 

@@ -6,7 +6,7 @@ w l^2 with a girder (a spandrel), 1/16 with a column. On a wall the beam rests f
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 
 from lineproof.beams.continuous.case_forces import factor_text
 from lineproof.beams.continuous.groups import named
@@ -28,6 +28,16 @@ _TEXT_IMPORTED = (
     "The beam is cast with a {carrier} that restrains its end. The frame analysis gives no larger "
     "moment here than the coefficient of clause 9.3.3 for an exterior support, which is taken."
 )
+
+
+def left_out(supports: Iterable[int]) -> str:
+    """Say of envelopes that the moment of restraint at these supports is not among them."""
+    numbers = sorted(supports)
+    many = "s" * (len(numbers) > 1)
+    return (
+        f"The moment of restraint at support{many} {' and '.join(map(str, numbers))} is of no load "
+        "case and is left out here; the part of that face has it with its resistance."
+    )
 
 
 def worst_case(model: Model, span: int) -> tuple[float, int]:

@@ -15,6 +15,7 @@ from lineproof.beams.continuous.deflection_figure import deflection_shapes_figur
 from lineproof.beams.continuous.deliverables import record_drawings
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.envelope_sections import moment_sections, shear_sections
+from lineproof.beams.continuous.faces import restrained_supports
 from lineproof.beams.continuous.figure_along import in_figures
 from lineproof.beams.continuous.figure_envelope import (
     MomentPiece,
@@ -27,6 +28,7 @@ from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
 from lineproof.beams.continuous.model import LOADS, Model
 from lineproof.beams.continuous.resistance import provide
 from lineproof.beams.continuous.resistance_demand import stretches_at
+from lineproof.beams.continuous.restraint import left_out
 from lineproof.beams.continuous.summary_supports import COLUMNS as FOR_COLUMNS
 from lineproof.beams.continuous.summary_supports import TITLE as FOR_SUPPORTS
 from lineproof.beams.continuous.summary_supports import WIDTHS as FOR_WIDTHS
@@ -236,6 +238,9 @@ def _record_stations(model: Model) -> None:
         rests_on=model.lengths,
         csv="envelopes",
     )  # fmt: skip
+    restrained = restrained_supports(model)
+    if restrained:
+        model.sheet.note("restraint", left_out(restrained), title="Restraint")
 
 
 def _number(value: float, unit: str) -> str:
