@@ -15,7 +15,18 @@ from lineproof.beams.continuous.figure_elevation_gaps import Short, gap_notes, g
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, parts, view
 from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
-from lineproof.drawing import LIGHT, OUTLINE, Arrow, Dimension, Figure, Line, Shape, Text, words
+from lineproof.drawing import (
+    LIGHT,
+    OUTLINE,
+    Arrow,
+    Dimension,
+    Figure,
+    Line,
+    Runs,
+    Shape,
+    Text,
+    words,
+)
 from lineproof.drawing.metrics import text_width
 from lineproof.drawing.paper import FIT_MARGIN
 from lineproof.quantity.digits import fixed
@@ -124,12 +135,14 @@ def _section_marks(seen: View, sections: Sequence[Section]) -> list[Shape]:
 
 def _letter(seen: View, letter: str, x: float, height: float) -> Text:
     """Return the letter right of its mark, or left of the arrow where an axis stands there."""
-    runs = ((letter, "bold"),)
+    runs: Runs = ((letter, "bold"),)
     width = seen.mm(text_width(runs, LETTER) + 0.5)
     right, left = x + seen.mm(0.9), x - seen.mm(3.2)
     crossed = any(right - seen.mm(0.5) < axis < right + width for axis in seen.outline.axes)
-    at, anchor = (left, "end") if crossed else (right, "start")
-    return Text((at, height + seen.mm(1.6)), runs, "text", LETTER, anchor)
+    y = height + seen.mm(1.6)
+    if crossed:
+        return Text((left, y), runs, "text", LETTER, "end")
+    return Text((right, y), runs, "text", LETTER, "start")
 
 
 def _spans(seen: View, floor: float) -> list[Shape]:
@@ -155,10 +168,8 @@ def _note_lines(seen: View, detailing: Detailing, short: Sequence[Short]) -> lis
     legs = {zone.legs for zone in detailing.stirrups if zone.span in seen.spans}
     forms = " and ".join("closed" if each else "open" for each in sorted(closed))
     scale = f"Dimensions in mm, scale 1 : {seen.ratio:g}."
-    drawn = (
-        "Bars are drawn apart, with cut lengths (up to 10 mm longer); their ends are dimensioned"
-    )
-    lines = [f"{scale} {drawn} from the support axes."]
+    drawn = "Bars are drawn apart; cut lengths are rounded up to full 10 mm; ends of bars"
+    lines = [f"{scale} {drawn} are dimensioned from the support axes."]
     if closed:
         count = ", ".join(map(str, sorted(legs)))
         lines.append(

@@ -17,10 +17,7 @@ from lineproof.drawing.paper import FIT_MARGIN
 BAND = 1.5
 """Height of the hatching inside the face of the concrete."""
 SIZE = 2.3
-NOTE = (
-    "Hatched: the bars of that face are not enough there, or none count; places in m from the left "
-    "axis of the span"
-)
+NOTE = "Hatched: not enough bars at that face, or none that count; m from the left axis of the span"
 
 
 @dataclass(frozen=True, slots=True)
