@@ -11,6 +11,7 @@ from lineproof.beams.continuous.detailing_data import ShearStretch
 from lineproof.beams.continuous.detailing_record import record_detailing, record_lengths_and_ends
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
+from lineproof.beams.continuous.shear_further import record_further
 from lineproof.beams.continuous.torsion_face import record_torsion_at_face
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
@@ -42,7 +43,12 @@ def _writers(design: Design) -> Writers:
     def torsion(steps: Steps, demand: Demand, near: End) -> None:
         record_torsion_at_face(design, steps, demand, near)
 
-    return Writers(model.sheet, design.designed, span, forces, _record_shear, torsion=torsion)
+    def section(number: int, row: int, column: int, key: str) -> Mapping[str, Entry]:
+        return record_further(design, number, (row, column), key)
+
+    return Writers(
+        model.sheet, design.designed, span, forces, _record_shear, torsion=torsion, section=section
+    )
 
 
 def _record_shear(steps: Steps, stretch: ShearStretch) -> None:

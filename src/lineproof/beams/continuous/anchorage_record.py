@@ -91,6 +91,8 @@ class Writers:
     ``span`` gives the entries of a span (h, l, l_n, b_f, b_o); ``forces`` records M_f and V_f of
     a demand and binds them; ``shear`` records V_r, V_s and theta of a stretch and binds them.
     ``torsion`` records the torsion of a demand at the face of a support and binds T_f, p_h, A_o.
+    ``section`` returns the entries of a section of shear by span, case and column of its check; it
+    is recorded in a part of the key given where it is not yet.
     """
 
     sheet: Sheet
@@ -101,6 +103,7 @@ class Writers:
     sizes: Mapping[str, Entry] = field(default_factory=dict)
     """Diameters and areas that are recorded already, ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
     torsion: Callable[[Steps, Demand, End], None] | None = None
+    section: Callable[[int, int, int, str], Mapping[str, Entry]] | None = None
 
 
 Lengths = Mapping[Bar, Mapping[str, Entry]]

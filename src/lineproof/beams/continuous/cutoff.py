@@ -36,6 +36,7 @@ from lineproof.beams.continuous.resistance_demand import (
     stretch_at,
     stretches_at,
 )
+from lineproof.formula import Formula
 from lineproof.standards.a23_3 import cutoff as clause
 
 STEP = 50.0
@@ -228,13 +229,22 @@ def _between(
     return Point(float(t[index]), int(M[:, index].argmax()))
 
 
+def extension_formula(designed: Designed, span: int) -> Formula:
+    """Return what bars extend past a point of no further need in a span (12.10.3).
+
+    The shift for shear stands for the force that it adds only where no torsion counts (11.3.9.2);
+    where it does, that force is checked along the bars (11.3.10.6).
+    """
+    return clause.EXTENSION_PLAIN if span in designed.torsion else clause.EXTENSION
+
+
 def extension(
     designed: Designed, face: Face, span: int, near: End, t: float, size_d: float
 ) -> float:
     """Return the extension past a point of no further need; ``size_d`` is the bar diameter."""
     d, d_v = depths(designed, face, span, near)
     theta = stretch_at(designed, along(designed, span, near, t)).theta
-    return value(clause.EXTENSION, d=d, d_b=size_d, d_v=d_v, theta=theta)
+    return value(extension_formula(designed, span), d=d, d_b=size_d, d_v=d_v, theta=theta)
 
 
 def depths(designed: Designed, face: Face, span: int, near: End) -> tuple[float, float]:
@@ -339,4 +349,4 @@ def worst_between(
     x = np.concatenate([kept, np.array(inside)])
     side = demand.side(face).between(demand.x, x)
     provided = provide(designed, standing, face, x, np.full(len(x), span))
-    return float(ratios(side, provided, yield_force(designed), torsion=True).max())
+    return float(ratios(side, provided, yield_force(designed), side.force).max())

@@ -11,6 +11,7 @@ from lineproof.beams.continuous.cutoff import (
     Frame,
     Point,
     along,
+    extension_formula,
     full_moment,
     local,
     no_further_need,
@@ -37,6 +38,10 @@ from lineproof.standards.a23_3 import cutoff as clause
 _NONE = (
     "No bars go on: the bars may end only where no load case brings tension to the {face}, and "
     "past it."
+)
+_NO_SHIFT = (
+    "Torsion counts in this span: no longer bars stand for what shear adds; the tension by moment, "
+    "shear and torsion together is checked along the bars."
 )
 
 
@@ -149,10 +154,14 @@ def _record_point(site: Site, index: int, point: Point) -> None:
 def record_extension(site: Site, steps: Steps, t_point: float, t: float, runs: Runs) -> Steps:
     """Record the extension past a point and its check; by d and d_v of the whole section."""
     designed, side = site.writers.designed, site.side
-    _record_angle(site, steps, along(designed, side.span, side.near, t_point))
+    formula = extension_formula(designed, side.span)
+    if "theta" in formula.names:
+        _record_angle(site, steps, along(designed, side.span, side.near, t_point))
+    else:
+        site.writers.sheet.note("no-shift", _NO_SHIFT, title="Shear", clause="11.3.9.2")
     past = Steps(site.writers.sheet, steps.place | site.section)
     past.bind(x_e=site.given("x_e", t), d_b=site.bar(thickest(runs))["d_b"])
-    past.line(clause.EXTENSION)
+    past.line(formula)
     past.line(clause.PAST_INWARD if side.face == "bottom" else clause.PAST_OUTWARD)
     past.check(clause.EXTENDED, title=ends_before(clause.EXTENDED, past.entry("l_ext")))
     return past

@@ -102,7 +102,7 @@ def torsion_forces(
                 for T in (state.v["T_all"][:, 1], state.v["T_all"][:, -2])]  # fmt: skip
         made[span] = TorsionForces(
             at, forces[0], forces[1], (ends[0], ends[1]), acting.values["p_h"],
-            acting.values["A_o"],
+            acting.values["A_o"], *check.turned_forces(),
         )  # fmt: skip
     return made
 

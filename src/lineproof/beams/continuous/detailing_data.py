@@ -104,7 +104,10 @@ class TorsionForces:
 
     ``bottom`` and ``top`` are the forces [N] that the bars of each face need at the stations ``x``
     from the left axis, moment and shear included (11.3.10.6). ``ends`` holds the torsion designed
-    for at both faces, case by case [N.mm], 0 where it does not count.
+    for at both faces, case by case [N.mm], 0 where it does not count. The forces have what the
+    layout keeps in hand. ``sections`` are the stations of the sections of shear from the left axis
+    (cases, columns), ``by_case`` the force [N] in the bottom and the top bars there, 0 where
+    torsion does not count and nearer to a support than its critical section.
     """
 
     x: Floats
@@ -113,6 +116,8 @@ class TorsionForces:
     ends: tuple[Floats, Floats]
     p_h: float
     A_o: float
+    sections: Floats
+    by_case: tuple[Floats, Floats]
 
 
 @dataclass(frozen=True, eq=False)

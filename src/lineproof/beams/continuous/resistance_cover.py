@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
-from dataclasses import dataclass
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -11,13 +11,15 @@ from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import Provided, provide, stand
+from lineproof.beams.continuous.resistance import Provided, Standing, provide, stand
 from lineproof.beams.continuous.resistance_demand import (
     NOTHING,
     Side,
     SpanDemand,
+    demand_at,
     demand_of,
 )
+from lineproof.beams.continuous.resistance_torsion import TurnedStation, worst_turned
 
 FACES: tuple[Face, Face] = ("bottom", "top")
 COUNT = 1000
@@ -29,7 +31,8 @@ class Station:
     """One station of one face: moment and tension against what the developed bars carry.
 
     ``x`` along the beam, ``local`` from the left axis of the span; N, mm. ``row`` and ``case``
-    are those of the larger of the two ratios.
+    are those of the larger of the two ratios. ``column`` is that of the section of shear whose
+    tension with torsion F is, None where F is without.
     """
 
     face: Face
@@ -42,6 +45,7 @@ class Station:
     F_r: float
     row: int
     case: LoadCase
+    column: int | None = None
 
     @property
     def ratio(self) -> float:
@@ -117,7 +121,8 @@ class Coverage:
     """The worst station of every face and span, and the gaps.
 
     ``by_moment`` and ``by_tension`` are those of the moment alone and of the tension with shear,
-    the latter between the faces of the supports.
+    the latter between the faces of the supports, and with torsion where it counts. A gap is of
+    moment or shear; too few bars for torsion fail the check of their section.
     """
 
     worst: Station
@@ -139,13 +144,13 @@ def ratio_of(demand: float, provided: float) -> float:
     return demand / provided if provided > 0 else float("inf")
 
 
-def ratios(side: Side, provided: Provided, force: float, *, torsion: bool = False) -> Floats:
+def ratios(side: Side, provided: Provided, force: float, turned: Floats | None = None) -> Floats:
     """Return demand over resistance at every station; ``force`` is that of 1 mm2 at yield.
 
-    With ``torsion`` its force counts as well; it has checks of its own at the sections of shear.
+    ``turned`` is the tension with torsion, if it is to count as well.
     """
-    F_r, F_f = provided.A * force, side.force if torsion else side.F
-    made: Floats = np.maximum(_ratios(side.M, provided.M_r), _ratios(F_f, F_r))
+    F_f = side.F if turned is None else np.maximum(side.F, turned)
+    made: Floats = np.maximum(_ratios(side.M, provided.M_r), _ratios(F_f, provided.A * force))
     return made
 
 
@@ -177,6 +182,9 @@ def covered(designed: Designed, runs: Iterable[BarRun], count: int = COUNT) -> C
             for found, values in zip(each, _apart(designed, demand, face, provided), strict=True):
                 index = _worst_in(demand.side(face), values, 0, len(values) - 1)
                 found.append(_station(designed, demand, face, provided, index))
+            turned = worst_turned(designed, standing, face, span)
+            if turned is not None:
+                each[1].append(_with_torsion(designed, standing, face, span, turned))
     governing = max(worst, key=lambda s: s.ratio)
     return Coverage(governing, tuple(worst), tuple(each[0]), tuple(each[1]), tuple(gaps))
 
@@ -204,6 +212,19 @@ def _station(
         face, demand.span, float(demand.x[index]), float(demand.local[index]), M_f, M_r, F, F_r,
         row, designed.forces.cases[row],
     )  # fmt: skip
+
+
+def _with_torsion(
+    designed: Designed, standing: Sequence[Standing], face: Face, span: int, turned: TurnedStation
+) -> Station:
+    """Return a section of shear as a station, its tension with torsion."""
+    demand = demand_at(designed, span, np.array([turned.local]))
+    provided = provide(designed, standing, face, demand.x, np.array([span]))
+    plain = _station(designed, demand, face, provided, 0)
+    case = designed.forces.cases[turned.row]
+    return replace(
+        plain, F=turned.F, F_r=turned.F_r, row=turned.row, case=case, column=turned.column
+    )
 
 
 def _gaps(

@@ -31,7 +31,9 @@ from lineproof.beams.continuous.resistance_station import (
     Laid,
     record_moment,
     record_tension,
+    record_turned,
 )
+from lineproof.beams.continuous.resistance_torsion import turned_at
 from lineproof.beams.continuous.restraint import left_out
 from lineproof.record import Entry
 
@@ -42,8 +44,13 @@ METHOD = (
     "length on; a hook from its outside over its own length; like bars that are lapped count as "
     "one. The bars carry the moment of every load case, and with the shear of the same case the "
     "tension of 11.3.9.2, which need not exceed what the largest "
-    "moment of that face needs alone. Compression bars are not counted. Looked at: {count} "
-    "stations a span and wherever the shear jumps."
+    "moment of that face needs alone. {torsion}Compression bars are not counted. Looked at: "
+    "{count} stations a span and wherever the shear jumps."
+)
+_TORSION = (
+    "Where torsion counts they also carry the tension of 11.3.10.6, which is not limited so, at "
+    "every section of shear, each load case with its own shear, torsion and angle; nearer to a "
+    "support than its critical section, that section stands for it. "
 )
 
 
@@ -77,7 +84,8 @@ def _record_worst(laid: Laid, found: Coverage, face: Face) -> Iterator[Station]:
     if station.F <= NOTHING or (station.F_r <= 0 and station.M_f > NOTHING):
         return  # nothing asked, or the gap stands with the moment
     title = f"{name}: the station that their tension uses most, span {station.span}"
-    record_tension(laid, station, worst_key(face, tension=True), title)
+    record = record_tension if station.column is None else record_turned
+    record(laid, station, worst_key(face, tension=True), title)
     if ratio_of(station.F, station.F_r) > 1:
         yield station
 
@@ -96,7 +104,9 @@ def _record_table(
 ) -> None:
     sheet = writers.sheet
     with sheet.part(COVERAGE, "Resistance of the bars as detailed along the beam"):
-        sheet.note("method", METHOD.format(count=count), title="Method", clause="11.3.9")
+        torsion = _TORSION if writers.designed.torsion else ""
+        method = METHOD.format(count=count, torsion=torsion)
+        sheet.note("method", method, title="Method", clause="11.3.9")
         sheet.table(
             "stations",
             ["Span", "x, m", "M bottom", "Mr bottom", "ratio", "M top", "Mr top", "ratio"],
@@ -131,7 +141,8 @@ def _rows(writers: Writers, standing: Sequence[Standing], span: int) -> list[lis
     for face in FACES:
         provided = provide(designed, standing, face, demand.x, np.full(len(local), span))
         side = demand.side(face)
-        ratio = ratios(side, provided, yield_force(designed))
+        turned = turned_at(designed, face, span, local)
+        ratio = ratios(side, provided, yield_force(designed), turned)
         columns.append((np.maximum(side.M, 0.0), provided.M_r, ratio))
     return [
         [str(span), f"{x / 1000:.3f}",

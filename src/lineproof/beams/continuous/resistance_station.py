@@ -217,6 +217,30 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
         laid.check(steps, shear_bars.CAPPED_HOLDS, station, tension=True)
 
 
+def record_turned(laid: Laid, station: Station, key: str, title: str) -> None:
+    """Record the tension with torsion of a section of shear against the bars there, in a part.
+
+    The force is that of the section, which is recorded with its working where it is not yet.
+    """
+    writers, face = laid.writers, station.face
+    column, section = station.column, writers.section
+    assert column is not None  # asked for before  # noqa: S101
+    assert section is not None  # noqa: S101 - no torsion is known without a chapter on shear
+    force = section(station.span, station.row, column, f"{key}-shear")
+    _, t = _near(writers, station)
+    M_f = writers.designed.forces.demand(station.span, station.local, "left", station.row).M
+    with writers.sheet.part(key, title):
+        text = f"The section of shear {t:g} mm from the near support axis, {station.case}."
+        writers.sheet.note("place", text, title="Station")
+        steps = _developed(laid, station)
+        steps.bind(**{n: force[n] for n in ("F_lt", "F_lc") if n in force})
+        if (M_f >= 0) == (face == "bottom"):
+            laid.check(steps, shear_bars.TENSION_SIDE_HOLDS, station, tension=True)
+            return
+        steps.bind(A_sp=steps.entry("A_sd"))
+        laid.check(steps, shear_bars.COMPRESSION_SIDE_HOLDS, station, tension=True)
+
+
 def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:
     stretch = stretch_at(writers.designed, station.x)
     if writers.designed.shear:

@@ -91,7 +91,7 @@ def record_shear(design: Design) -> None:
     torsion = _record_torsion(design, alike)
     for row in choice.sections:
         for section in row:
-            _record_section(design, section, alike | torsion.get(section.span, {}))
+            record_one_section(design, section, alike | torsion.get(section.span, {}))
             support = section.span if section.end == "left" else section.span + 1
             restrained = support in design.designed.restrained
             if restrained and section.key == f"shear-{section.span}-{section.end}":
@@ -134,7 +134,8 @@ def _note_bars(steps: Steps, design: Design) -> None:
     )  # fmt: skip
 
 
-def _record_section(design: Design, section: ShearSection, more: Mapping[str, Entry]) -> None:
+def record_one_section(design: Design, section: ShearSection, more: Mapping[str, Entry]) -> None:
+    """Record a section of shear in a part; ``more``: the stirrups and the torsion of its span."""
     model = design.model
     sheet, span = model.sheet, section.span
     support = span if section.end == "left" else span + 1
@@ -199,15 +200,18 @@ def _several(
 ) -> Iterator[tuple[str, Sequence[BarGroup], float]]:
     """Give the bars whose depth a section of shear may have: where they lie, and their depth [mm].
 
-    They are those of the sections of flexure, and those that stand along the span.
+    They are those of the sections of flexure, and those that stand along the span: of the face in
+    tension, or of either where the smaller depth of both is used.
     """
-    designed, span, face = design.designed, section.span, section.tension
+    designed, span = design.designed, section.span
+    faces: tuple[Face, ...] = ("bottom", "top") if section.mixed else (section.tension,)
     h = designed.outline.depths[span - 1]
     below = (f"below span {span}", designed.bars.bottom[span - 1])
     above = [(f"above support {j}", top_layers(designed, j)) for j in (span, span + 1)]
     for where, layers in (below, *above):
         yield where, groups_of_layers(layers), effective_depth(designed, layers, h)
-    for over in bars_over(designed, design.standing, face, span):
+    found = (over for face in faces for over in bars_over(designed, design.standing, face, span))
+    for over in found:
         if over.shares:
             runs = (share.run for share in over.shares)
             yield "that stand there", groups_met(designed, runs), depth_over(designed, span, over)

@@ -183,6 +183,18 @@ class SpanCheck:
         )
         return self.state.columns, bottom, top
 
+    def turned_forces(self) -> tuple[Floats, tuple[Floats, Floats]]:
+        """Return stations from the left axis and the force of bottom and top bars there [N].
+
+        By case and column. Zero where torsion does not count, and nearer to a support than a
+        critical section, whose values hold there.
+        """
+        bottom, top = (
+            np.where(self.state.nearer, 0.0, force)
+            for force in self._by_face(self.state.v["counts"])
+        )
+        return self.state.v["x"], (bottom, top)
+
     def bar_areas(self) -> tuple[tuple[Floats, Floats], tuple[Floats, Floats]]:
         """Return the area that bottom and top bars need, and that which counts [mm2].
 

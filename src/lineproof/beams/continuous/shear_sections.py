@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Any, Literal
 
 import numpy as np
@@ -83,6 +83,13 @@ def sections(check: SpanCheck, forces: Forces) -> tuple[ShearSection, ...]:
     ordered = sorted(found, key=lambda each: (check.state.v["x"][each], each[1]))
     names = _Names()
     return tuple(_section(check, forces, row, column, names) for row, column in ordered)
+
+
+def section_at(check: SpanCheck, forces: Forces, row: int, column: int, key: str) -> ShearSection:
+    """Return the section of a case at a column, to be printed under a key of its own."""
+    made = _section(check, forces, row, column, _Names())
+    further = "" if made.place == "station" else ", another load case"
+    return replace(made, key=key, title=f"{made.title}{further}")
 
 
 def _at_end(check: SpanCheck, column: int) -> Iterator[tuple[int, int]]:

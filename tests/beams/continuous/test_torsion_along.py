@@ -1,0 +1,105 @@
+"""Tension with torsion along the bars as detailed, of the edge beam of the notebooks."""
+
+from __future__ import annotations
+
+import math
+
+import pytest
+
+from lineproof import beams
+from lineproof.beams.continuous.design import Design
+from lineproof.record import Entry
+
+from .flow import start
+from .test_edge_beam import CALLS, TURNED, edge, failing
+
+TURN = 1.25 * 5.5 + 1.5 * 5.0
+"""Torque per length of 1.25 D + 1.5 L [kN.m/m]."""
+P_H, A_O = 2 * (288.7 + 528.7), 0.85 * 288.7 * 528.7
+"""Perimeter [mm] and area [mm2] of the shear flow of 380 x 620 with 10M at 40 mm of cover."""
+
+
+@pytest.fixture(scope="module")
+def edge_beam() -> beams.ContinuousBeam:
+    beam = edge()
+    for call in CALLS[:-2]:
+        getattr(beam, call)()
+    return beam
+
+
+def force(design: Design, span: int, x: float, A_s: float) -> float:
+    """Return the tension [N] at a station by 11.3.6.4, 11.3.9.2 and 11.3.10.5 to .6.
+
+    The live load acts on the span; V_s is more than V_f, which is all that it may count.
+    """
+    found = [
+        design.model.forces.demand(span, x, "left", row)
+        for row, case in enumerate(design.model.forces.cases)
+        if str(case).startswith("1.25D + 1.5L")
+    ]
+    M, V = max((each.M, abs(each.V)) for each in found)
+    l_n = (7150, 7150)[span - 1]
+    T = TURN * abs(l_n / 2 - (x - 225)) * 1e3
+    d_v = 0.9 * (620 - 40 - 11.3 - 8)
+    V_fe = math.hypot(V, 0.9 * P_H * T / (2 * A_O))
+    eps_x = (max(M, V * d_v) / d_v + V_fe) / (2 * 200_000 * A_s)
+    cot = 1 / math.tan(math.radians(29 + 7000 * eps_x))
+    return M / d_v + math.hypot(V / 2, 0.45 * P_H * T / (2 * A_O)) * cot
+
+
+def test_worst_station_of_the_tension_counts_torsion(edge_beam: beams.ContinuousBeam) -> None:
+    """Bottom bars of span 1 at 2.525 m: 328.8 kN with torsion (by hand in test_edge_beam) of 340.
+
+    Without torsion the most used station would be one of span 2 with 0.771.
+    """
+    entries = edge_beam.sheet.entries_of("coverage-bottom-tension")
+    check = entries["bars-tension-side"]
+    F = force(edge_beam.design, 1, 2525, 1000)
+    assert pytest.approx(328.8e3, abs=50) == F
+    assert check.value == (pytest.approx(F, rel=1e-9), pytest.approx(5 * 200 * 340))
+    assert "2525 mm from the near support axis" in entries["place"].source.text
+    worst = max(e.value[0] / e.value[1] for e in turned_checks(edge_beam))
+    assert worst == pytest.approx(F / 340e3)
+
+
+def turned_checks(beam: beams.ContinuousBeam) -> list[Entry]:
+    """Return the checks of bottom bars in tension of the sections of shear."""
+    return [
+        entries["bars-tension-side"]
+        for part in beam.sheet.parts
+        if part.key.startswith("shear-")
+        for entries in [beam.sheet.entries_of(part.key)]
+        if "bars-tension-side" in entries and "bottom is in tension" in entries["case"].source.text
+    ]
+
+
+def test_table_of_the_bars_counts_torsion(edge_beam: beams.ContinuousBeam) -> None:
+    """Span 1, 2.370 m: all five bars developed, and torsion on the straight line of 50 mm."""
+    rows = edge_beam.sheet.entry("coverage/stations").source.content["rows"]
+    (row,) = [row for row in rows if list(row[:2]) == ["1", "2.370"]]
+    x = 2370.0
+    F = [force(edge_beam.design, 1, at, 1000) for at in (2325.0, 2375.0)]
+    between = F[0] + (F[1] - F[0]) * (x - 2325) / 50
+    assert float(row[4]) == pytest.approx(between / 340e3, abs=0.005)
+    assert "tension of 11.3.10.6" in edge_beam.sheet.entry("coverage/method").source.text
+
+
+def test_no_shift_stands_for_shear_where_torsion_counts(edge_beam: beams.ContinuousBeam) -> None:
+    """l_e of the bars cut over support 2 is d = 560.7 mm, not d_v cot theta (11.3.9.2)."""
+    entries = edge_beam.sheet.entries_of("anchorage-top-2-left-cut-1")
+    assert entries["l_e"].value == pytest.approx(560.7)
+    assert "theta" not in entries
+    assert "Torsion counts in this span" in entries["no-shift"].source.text
+
+
+def test_bars_of_which_torsion_asks_too_much_fail_along_the_beam() -> None:
+    """5-20M given in span 1 fail at the same section, with the same force, as in the shear."""
+    beam = start(**(TURNED | {"bottom_bars": ["5-20M", None, None]}))
+    for call in CALLS:
+        getattr(beam, call)()
+    entries = beam.sheet.entries_of("coverage-bottom-tension")
+    F, F_r = entries["bars-tension-side"].value
+    assert not entries["bars-tension-side"]
+    assert pytest.approx(5 * 300 * 340) == F_r
+    assert pytest.approx(max(e.value[0] for e in turned_checks(beam) if not e)) == F
+    assert "coverage-bottom-tension/bars-tension-side" in failing(beam.sheet)
