@@ -86,3 +86,35 @@ def test_assumed_restraint_adds_to_shear_and_reaction_and_shortens_the_flange() 
     l_vf = sheet.entry("interface-hog-1-right/l_vf").value
     assert l_vf == pytest.approx(7600 / 12 - 200, abs=0.01)
     assert "shear-1-right-restraint" not in {part.key for part in sheet.parts}
+
+
+def test_shear_with_the_restraint_has_its_own_resistance_and_tension_in_the_top_bars() -> None:
+    """The top is in tension by w l^2/24; 4-20M at the top, 10M at 350 mm, f'c 32, 620 x 380.
+
+    w_f = 1.25 x 20.3736 + 1.5 x 14.88 = 47.787 kN/m, M_f = 47.787 x 7.6^2/24 = 115.007 kN.m; V_fr =
+    140.67 + 115.007/7.6 = 155.80 kN. d_v = 0.9(620 - 30 - 11.3 - 9.75) = 512.06 mm. eps_x =
+    (115 007/512.06 + 155.80) 1000/(2 x 200 000 x 1200) = 0.000 792 5; beta = 0.4/(1 + 1.18875) =
+    0.18275; theta = 29 + 5.5475 = 34.548 deg, cot = 1.45237. V_c = 0.65 x 0.18275 x sqrt(32) x 380
+    x 512.06 = 130.76 kN, V_s = 0.85 x 200 x 400 x 512.06 x 1.45237/350 = 144.5 kN: V_r = 275.2 kN.
+    F_lt = 224.60 + (155.80 - 72.25) x 1.45237 = 345.95 kN, of 0.85 x 1200 x 400 = 408 kN.
+    """
+    beam = analysed()
+    run(beam, ("flexure", "shear"))
+    held = beam.sheet.entries_of("shear-1-left-restraint")
+    assert held["V_fr"].value == pytest.approx(155.80e3, abs=10)
+    assert held["eps_x"].value == pytest.approx(0.0007925, abs=5e-8)
+    assert held["theta"].value == pytest.approx(34.548, abs=1e-3)
+    V_fr, V_r = held["shear-restraint"].value
+    assert (V_fr, V_r) == (pytest.approx(155.80e3, abs=10), pytest.approx(275.25e3, abs=50))
+    F_lt, F_r = held["bars-tension-side"].value
+    assert (F_lt, F_r) == (pytest.approx(345.95e3, abs=50), pytest.approx(408e3))
+    assert not list(faults(record_so_far(beam).data))
+
+
+def test_top_bars_of_a_girder_are_chosen_with_the_shear_of_the_restraint() -> None:
+    """The choice asks 345.95 kN/(0.85 x 400 MPa) = 1017.5 mm2 of the top bars, as the page does."""
+    beam = analysed()
+    run(beam, ("flexure", "shear"))
+    _, (needed, there) = beam.design.stirrups.checks[0].bar_areas()
+    assert needed[:, 0].max() == pytest.approx(1017.5, abs=0.2)
+    assert there[0, 0] == pytest.approx(1200)

@@ -32,6 +32,7 @@ from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
 from lineproof.beams.continuous.resistance import effective_depth, top_layers
 from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
+from lineproof.beams.continuous.shear_restrained_record import record_restrained
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.shear_stretches import Share, bars_over, depth_over
 from lineproof.beams.continuous.stirrups_record import record_stirrups
@@ -42,7 +43,7 @@ from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars, shear
+from lineproof.standards.a23_3 import bars
 from lineproof.standards.a23_3.bars import BARS
 
 STIRRUPS = "stirrups"
@@ -58,12 +59,6 @@ THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
     "far as moment, shear and torsion together ask for, and the bars in the corners of the "
     "stirrups run through the beam."
-)
-
-_RESTRAINT = (
-    "The moment of restraint assumed for the top bars at this end adds to the shear and the "
-    "reaction here what holds it in balance over the span; at the far support it takes as much "
-    "away, which is not counted."
 )
 
 
@@ -91,11 +86,12 @@ def record_shear(design: Design) -> None:
     torsion = _record_torsion(design, alike)
     for row in choice.sections:
         for section in row:
-            record_one_section(design, section, alike | torsion.get(section.span, {}))
+            more = alike | torsion.get(section.span, {})
+            record_one_section(design, section, more)
             support = section.span if section.end == "left" else section.span + 1
             restrained = support in design.designed.restrained
             if restrained and section.key == f"shear-{section.span}-{section.end}":
-                _record_restraint(model, section)
+                record_restrained(model, choice.basis, section, more)
     _record_supports(design, alike)
     if model.inputs.slab_bars is not None and model.inputs.slab:
         _record_interfaces(design)
@@ -154,21 +150,6 @@ def record_one_section(design: Design, section: ShearSection, more: Mapping[str,
         if model.imported is not None and model.imported.has_torsion(span):
             record_imported_torsion(steps, model.imported, section.demand, section.end)
         record_section(steps, design.stirrups.basis, section)
-
-
-def _record_restraint(model: Model, section: ShearSection) -> None:
-    """Record the shear that the assumed moment of restraint adds, against the resistance."""
-    sheet, span = model.sheet, section.span
-    hog = f"hog-{span}-right" if section.end == "left" else f"hog-{span + 1}-left"
-    title = f"{section.title}: with the restraint assumed"
-    with sheet.part(f"{section.key}-restraint", title):
-        sheet.note("restraint", _RESTRAINT, title="Restraint", basis=COMMON_PRACTICE)
-        own = sheet.entries_of(section.key)
-        place = {"V_f": own["V_f"], "M_f": sheet.entry(f"{hog}/M_f"), "l": model.lengths[span - 1]}
-        steps = Steps(sheet, place)
-        steps.line(shear.WITH_RESTRAINT)
-        if "V_r" in own:  # else the strain out of range fails in the part of the section
-            steps.check(shear.RESTRAINT_STRENGTH, V_r=own["V_r"])
 
 
 def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:

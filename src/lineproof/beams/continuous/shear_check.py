@@ -17,6 +17,7 @@ from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.shear_arrays import Truths, value
 from lineproof.beams.continuous.shear_numbers import SpanEnd
+from lineproof.beams.continuous.shear_restrained import tension
 from lineproof.beams.continuous.shear_state import Critical, SpanState
 from lineproof.beams.continuous.stirrups import Band, Change, changes, effective
 from lineproof.beams.continuous.torsion import designed_for
@@ -209,6 +210,11 @@ class SpanCheck:
         for column, end in ((0, self.state.numbers.left), (-1, self.state.numbers.right)):
             asked[:, column] |= end.held != "free"
         bottom, top = (np.where(self.state.nearer, 0.0, F / force) for F in self._by_face(asked))
+        for column, w in self.state.held.items():
+            end = self.state.numbers.left if column == 0 else self.state.numbers.right
+            if end.held == "indirect":
+                F = tension(w, self.effective[:, [column]], self.state.basis)[:, 0]
+                top[:, column] = np.maximum(top[:, column], F / force)
         return (bottom, here), (top, there)
 
     def _by_face(self, asked: Truths) -> tuple[Floats, Floats]:

@@ -84,7 +84,7 @@ class SpanEnd:
     ``A_bearing`` is the area of bottom bars developed at the inner edge of an exterior bearing;
     ``A_sr`` the top bars that the largest moment at this face alone requires, if it may cap the
     force in the bars (11.3.9.4). ``restraint`` is the shear that an assumed moment of restraint
-    adds at this end [N].
+    adds at this end [N], ``moment`` that moment itself [N.mm], the top in tension.
     """
 
     held: Held = "direct"
@@ -92,6 +92,7 @@ class SpanEnd:
     A_bearing: float = 0.0
     A_sr: float | None = None
     restraint: float = 0.0
+    moment: float = 0.0
 
 
 @dataclass(frozen=True, slots=True)

@@ -101,7 +101,7 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
     _same(steps, "V_f", V_f)
     _same(steps, "M_f", section.values["M_f"], V_f * section.values["d_v"])
     record_torsion(steps, basis, section)
-    if not _record_method(steps, basis, section):
+    if not record_method(steps, basis, section):
         text = _OUT_OF_RANGE if section.A_s > 0 else _NO_BARS
         _note_other(steps, text, "out-of-range", "Resistance")
         return
@@ -116,8 +116,11 @@ def record_section(steps: Steps, basis: ShearBasis, section: ShearSection) -> No
         _record_other(steps, basis)
 
 
-def _record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> bool:
-    """Record factor and angle by the chosen method; tell whether the section is in its range."""
+def record_method(steps: Steps, basis: ShearBasis, section: ShearSection) -> bool:
+    """Record inside the open part factor and angle; tell whether the section is in their range.
+
+    Needs M_f, V_f, d_v, ``A_s`` in place, with torsion T_f, p_h, A_o.
+    """
     if section.plain:
         steps.line(shear_factors.A_G)
         steps.line(shear_factors.S_Z)

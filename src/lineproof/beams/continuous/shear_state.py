@@ -27,6 +27,7 @@ from lineproof.beams.continuous.shear_numbers import (
     depth_at,
 )
 from lineproof.beams.continuous.shear_resistance import MOST_STRAIN, resistances
+from lineproof.beams.continuous.shear_restrained import restrained
 from lineproof.beams.continuous.torsion import torque_per_length
 from lineproof.standards.a23_3 import shear, torsion
 
@@ -62,7 +63,7 @@ class SpanState:
     ``needed`` is what strength asks of the stirrups, 1/s [1/mm]; ``V_plain`` the resistance of the
     concrete without stirrups or below the minimum; ``counts`` where torsion counts. ``sides``
     tells on which side of a load a column stands; ``nearer`` the columns nearer to a support than
-    its critical section.
+    its critical section. ``held`` is what :func:`restrained` gives.
     """
 
     basis: ShearBasis
@@ -75,6 +76,7 @@ class SpanState:
     right: Critical
     v: dict[str, Any]
     nearer: Truths
+    held: dict[int, dict[str, Any]]
 
     @property
     def h(self) -> float:
@@ -175,6 +177,9 @@ def span_state(
     more = np.where(at < sum(faces) / 2, numbers.left.restraint, numbers.right.restraint)
     legs = value(torsion.LEGS_FOR_SHEAR, v | {"V_f": v["V_f"] + more})
     v["asked"] = (legs + 2 * v["a_t"]) / basis.A_v
+    held = restrained(basis, numbers, v)
+    for column, w in held.items():
+        v["asked"][:, column] = np.maximum(v["asked"][:, column], w["needed"][:, 0])
     room = 1e-6
     before, after = at < left.x[:, None] - room, at > right.x[:, None] + room
     before[:, 0] = after[:, 0] = before[:, -1] = after[:, -1] = False
@@ -183,7 +188,7 @@ def span_state(
         v[name] = np.where(before, v[name][:, :1], np.where(after, v[name][:, -1:], v[name]))
     sides = ("left", *sides, "right")
     cases = forces.cases
-    return SpanState(basis, numbers, cases, faces, x, sides, left, right, v, before | after)
+    return SpanState(basis, numbers, cases, faces, x, sides, left, right, v, before | after, held)
 
 
 def _columns(left: Floats, stations: Floats, right: Floats) -> Floats:

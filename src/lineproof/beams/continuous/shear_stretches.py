@@ -208,10 +208,9 @@ def _end(model: Model, designed: Designed, span: int, end: End) -> SpanEnd:
     elif typed.carrier == "girder":
         held = "indirect"
     cap = needed_top(model, designed, support) if held == "direct" else None
-    more = 0.0
-    if support in designed.restrained:
-        more = restraint_moment(model, support, span) / designed.outline.lengths[span - 1]
-    return SpanEnd(held, A_sr=cap, restraint=more)
+    moment = restraint_moment(model, support, span) if support in designed.restrained else 0.0
+    more = moment / designed.outline.lengths[span - 1]
+    return SpanEnd(held, A_sr=cap, restraint=more, moment=moment)
 
 
 def needed_bottom(model: Model, designed: Designed, span: int) -> float | None:
