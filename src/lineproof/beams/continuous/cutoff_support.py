@@ -10,15 +10,14 @@ from lineproof.beams.bars import BarLayers, bars_text
 from lineproof.beams.continuous.anchorage import ties_at
 from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain, record_hook
 from lineproof.beams.continuous.cutoff import (
-    Point,
     distance,
     half_of,
     local,
     no_further_need,
     support_of,
 )
-from lineproof.beams.continuous.cutoff_ends import Runs, inflection, passes, tip
-from lineproof.beams.continuous.cutoff_record import Site, ends_before, record_extension, thickest
+from lineproof.beams.continuous.cutoff_ends import Runs, inflection, tip
+from lineproof.beams.continuous.cutoff_record import Site, thickest
 from lineproof.beams.continuous.cutoff_sets import (
     begin,
     grouped,
@@ -220,63 +219,6 @@ def record_restrained_end(site: Site) -> None:
         steps.check(clause.RESTRAINED_END)
         steps.bind(l_d=site.longest(side.runs)["l_d"], l_av=steps.entry("l_ext"))
         steps.check(development.DEVELOPED)
-
-
-def record_past_inflection(site: Site) -> None:
-    """Record how far the longest top bars pass the point of inflection (12.12.2)."""
-    side, designed = site.side, site.writers.designed
-    with site.writers.sheet.part(f"{site.key}-inflection", f"{site.title}: past the inflection"):
-        point = no_further_need(site.frame, "top", side.span, side.near, 0.0)
-        if passes(designed, side):
-            _note_through(site)
-        elif point is None:
-            _fail_inflection(site)
-        else:
-            _record_inflection(site, point)
-
-
-def _note_through(site: Site) -> None:
-    to = "to the free end" if site.writers.designed.cantilever(site.side.span) else "on"
-    site.writers.sheet.note(
-        "through",
-        f"{text_of(site.side.kept)} run {to}: they do not end near a point of inflection.",
-        title="End of the top bars",
-        basis=COMMON_PRACTICE,
-    )
-
-
-def _fail_inflection(site: Site) -> None:
-    """Record a check that fails: bars end although the top stays in tension up to midspan."""
-    sheet = site.writers.sheet
-    sheet.note(
-        "no-inflection",
-        "In some load case the top stays in tension up to midspan: the bars may not end before.",
-        title="Point of inflection",
-        clause="12.12.2",
-    )
-    none = sheet.given("l_ext", "0 mm", source="no point of inflection")
-    sheet.check(clause.LONG_PAST_INFLECTION, l_pi=site.section["d"], l_ext=none)
-
-
-def _record_inflection(site: Site, point: Point) -> None:
-    side, writers = site.side, site.writers
-    sheet = writers.sheet
-    case = writers.designed.forces.cases[point.row]
-    steps = Steps(sheet, site.section)
-    steps.bind(x_t=site.given("x_t", point.t, f"point of inflection, {case}"))
-    past = record_extension(site, steps, point.t, side.t_kept, side.kept)
-    past.line(clause.LENGTH_PAST_INFLECTION)
-    l_ext = past.entry("l_ext")
-    title = ends_before(clause.LONG_PAST_INFLECTION, l_ext)
-    past.check(clause.LONG_PAST_INFLECTION, title=title)
-    if l_ext.value >= 0:
-        A_pi = record_area(
-            Steps(sheet, writers.sizes), grouped(writers, side.kept), "A_pi", depth=False
-        )
-    else:
-        A_pi = sheet.given("A_pi", "0 mm2", source="all of them end before it")
-    past.bind(A_pi=A_pi, A_s=site.section["A_s"])
-    past.check(clause.TOP_PAST_INFLECTION)
 
 
 def record_hooks(writers: Writers, runs: Runs) -> Hooks:

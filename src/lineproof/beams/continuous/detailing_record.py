@@ -14,6 +14,7 @@ from lineproof.beams.continuous.anchorage_record import (
 )
 from lineproof.beams.continuous.cutoff import Frame
 from lineproof.beams.continuous.cutoff_ends import Runs, at_support, bottom_side, top_side
+from lineproof.beams.continuous.cutoff_inflection import record_past_inflection
 from lineproof.beams.continuous.cutoff_record import Site, record_cuts, side_key
 from lineproof.beams.continuous.cutoff_support import (
     Hooks,
@@ -22,7 +23,6 @@ from lineproof.beams.continuous.cutoff_support import (
     record_end_top,
     record_hooks,
     record_into_support,
-    record_past_inflection,
     record_restrained_end,
     record_section,
     record_zero_moment,
