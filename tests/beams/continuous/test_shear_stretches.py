@@ -7,10 +7,13 @@ from dataclasses import replace
 import pytest
 
 from lineproof.beams.bars import BarLayer
+from lineproof.beams.continuous.bars_counted import record_area
 from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.shear_stretches import bars_over, span_numbers
+from lineproof.beams.steps import Steps
+from lineproof.sheet import Sheet
 
 from .flow import CALLS, run, start
 from .laid import beam_of
@@ -57,6 +60,27 @@ def test_bars_lapped_too_little_count_as_far_as_each_is_developed() -> None:
     areas = {(round(over.start), round(over.end)): over.area for over in found}
     assert areas[round(3300 - 2 * quarter), 3000] == pytest.approx(300.0)
     assert areas[round(3300 - quarter), round(3000 + quarter)] == pytest.approx(100.0)
+
+
+def test_the_place_where_bars_of_a_stretch_are_the_least_is_said() -> None:
+    """From 3.051 to 3.249 m each bar reaches 3300 - 3249.2 = 50.8 mm at least: 0.05 of 996.7 mm."""
+    four = (BarLayer(4, "25M"),)
+    bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
+    designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
+    runs = [
+        BarRun("bottom", 1, 2, "25M", -150.0, 3300.0),
+        BarRun("bottom", 1, 2, "25M", 3000.0, 7150.0),
+    ]
+    found = bars_over(designed, stand(designed, runs), "bottom", 1)
+    (over,) = [each for each in found if round(each.start) == 3051]
+    sheet = Sheet("B1", "Bars")
+    with sheet.part("bars", "Bars"):
+        record_area(Steps(sheet, {}), "A_s", over)
+    told = (
+        "least from 3.05 to 3.25 m from support 1: 51 mm to the end of the bars, of 997 mm needed"
+    )
+    assert sheet.entries_of("bars")["r_t1"].source.origin == told
+    assert sheet.entries_of("bars")["A_s"].value == pytest.approx(4 * 500 * 0.05)
 
 
 def test_an_assumed_restraint_adds_its_moment_over_the_span() -> None:

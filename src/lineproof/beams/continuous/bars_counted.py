@@ -3,10 +3,9 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Iterable
 from typing import Any
 
-from lineproof.beams.continuous.shear_stretches import Share
+from lineproof.beams.continuous.shear_stretches import BarsOver
 from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
@@ -18,11 +17,11 @@ _TITLES = {
 }
 
 
-def record_area(steps: Steps, symbol: str, shares: Iterable[Share]) -> Entry:
+def record_area(steps: Steps, symbol: str, over: BarsOver) -> Entry:
     """Record inside the open part the area of bars that count, and bind it as ``symbol``."""
-    sheet = steps.sheet
+    sheet, where = steps.sheet, _where(over)
     counts: Counter[tuple[str, float, float, float]] = Counter()
-    for share in shares:
+    for share in over.shares:
         counts[share.run.size, share.part, share.length, share.rise] += share.run.number
     if not counts:
         made = sheet.given(symbol, "0 mm2", source="no bar is developed here")
@@ -49,7 +48,7 @@ def record_area(steps: Steps, symbol: str, shares: Iterable[Share]) -> Entry:
             name = f"r_{letter}{place}"
             bound[name] = sheet.given(
                 name, f"{part:.12g}", f"part developed of bars {size}, {side} side, group {place}",
-                source=f"{length:.0f} mm to the end of the bars, of {rise:.0f} mm needed",
+                source=f"{where} {length:.0f} mm to the end of the bars, of {rise:.0f} mm needed",
             )  # fmt: skip
             term = f"{term}*{name}"
         terms.append(term)
@@ -57,3 +56,11 @@ def record_area(steps: Steps, symbol: str, shares: Iterable[Share]) -> Entry:
     made = sheet.line(stated(text, system="N-mm"), title=_TITLES[symbol], **bound)
     steps.bind(**{symbol: made})
     return made
+
+
+def _where(over: BarsOver) -> str:
+    """Say where the bars of a stretch are the least developed."""
+    start, end = (f"{x / 1000:.2f}" for x in over.looked_at)
+    if start == end:
+        return f"at {end} m from support 1:"
+    return f"least from {start} to {end} m from support 1:"

@@ -34,7 +34,7 @@ from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_restrained_record import record_restrained
 from lineproof.beams.continuous.shear_sections import ShearSection
-from lineproof.beams.continuous.shear_stretches import Share, bars_over, depth_over
+from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over, depth_over
 from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.continuous.torsion_inputs import corner_bar
@@ -228,14 +228,14 @@ def _record_bars(design: Design, steps: Steps, section: ShearSection) -> None:
         steps.bind(A_sr=_needed(design.model, section))
 
 
-def _counted(design: Design, section: ShearSection, face: Face, area: float) -> tuple[Share, ...]:
+def _counted(design: Design, section: ShearSection, face: Face, area: float) -> BarsOver:
     """Return the bars of a face whose area the section was chosen by."""
     x = design.outline.axes[section.span - 1] + section.demand.x
     standing = design.standing
     for over in bars_over(design.designed, standing, face, section.span):
         met = over.start - 1 <= x <= over.end + 1
         if met and abs(over.area - area) <= _SAME * max(area, 1.0):
-            return over.shares
+            return over
     msg = f"{section.key}: the bars of the {face} have another area than {area!r}"
     raise AssertionError(msg)
 

@@ -82,11 +82,16 @@ class Share:
 
 @dataclass(frozen=True, slots=True)
 class BarsOver:
-    """The bars of a face that count over a stretch from ``start`` to ``end`` along the beam."""
+    """The bars of a face that count over a stretch from ``start`` to ``end`` along the beam.
+
+    ``looked_at`` are the places between which their parts are the least: those ends, but near a
+    support the section from which on its bars count.
+    """
 
     start: float
     end: float
     shares: tuple[Share, ...]
+    looked_at: tuple[float, float]
 
     @property
     def area(self) -> float:
@@ -110,9 +115,9 @@ def bars_over(
     made = []
     for start, end in pairwise(sorted(cuts)):
         if end - start > _SHORT:
-            places = [min(max(x, first), last) for x in (start, end)]
-            shares = (_share(bars, places) for bars in own)
-            made.append(BarsOver(start, end, tuple(s for s in shares if s.part > 0)))
+            a, b = (min(max(x, first), last) for x in (start, end))
+            shares = (_share(bars, (a, b)) for bars in own)
+            made.append(BarsOver(start, end, tuple(s for s in shares if s.part > 0), (a, b)))
     return tuple(made)
 
 
