@@ -103,3 +103,11 @@ def test_bars_of_which_torsion_asks_too_much_fail_along_the_beam() -> None:
     assert pytest.approx(5 * 300 * 340) == F_r
     assert pytest.approx(max(e.value[0] for e in turned_checks(beam) if not e)) == F
     assert "coverage-bottom-tension/bars-tension-side" in failing(beam.sheet)
+
+
+def test_bars_lapped_far_away_count_by_their_development_length(
+    edge_beam: beams.ContinuousBeam,
+) -> None:
+    """At the largest moment of span 2, 4.2 m from a lap, l_d makes the bars whole, not l_s."""
+    A_sd = edge_beam.sheet.entries_of("coverage-bottom")["A_sd"]
+    assert {e.symbol for e in A_sd.args if e.symbol.startswith("l_")} == {"l_av", "l_d"}

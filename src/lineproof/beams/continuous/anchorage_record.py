@@ -100,8 +100,8 @@ class Writers:
     span: Callable[[int], Mapping[str, Entry]]
     forces: Callable[[Steps, Demand, End, Entry | None], None] = forces_as_given
     shear: Callable[[Steps, ShearStretch], None] = record_stretch
-    sizes: Mapping[str, Entry] = field(default_factory=dict)
-    """Diameters and areas that are recorded already, ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
+    sizes: Mapping[str, Mapping[str, Entry]] = field(default_factory=dict)
+    """Diameters and areas recorded for a face: ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
     torsion: Callable[[Steps, Demand, End], None] | None = None
     section: Callable[[int, int, int, str], Mapping[str, Entry]] | None = None
 
@@ -129,12 +129,13 @@ def record_lengths(writers: Writers, runs: Iterable[BarRun]) -> Lengths:
     return made
 
 
-def sizes_of(lengths: Lengths) -> dict[str, Entry]:
-    """Return the diameters and areas of all bars whose development is recorded, and d_bs."""
-    made: dict[str, Entry] = {}
+def sizes_of(lengths: Lengths) -> dict[str, dict[str, Entry]]:
+    """Return diameters and areas of the bars of each face whose development is recorded, d_bs."""
+    made: dict[str, dict[str, Entry]] = {}
     for bar, entries in lengths.items():
-        made[f"d_b {bar.size}"], made[f"A_b {bar.size}"] = entries["d_b"], entries["A_b"]
-        made["d_bs"] = entries["d_bs"]
+        own = made.setdefault(bar.face, {})
+        own[f"d_b {bar.size}"], own[f"A_b {bar.size}"] = entries["d_b"], entries["A_b"]
+        own["d_bs"] = entries["d_bs"]
     return made
 
 

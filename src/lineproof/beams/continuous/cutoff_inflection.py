@@ -111,7 +111,7 @@ def _record_length(steps: Steps) -> None:
 def _record_third(site: Site, point: Point, *, through: bool) -> None:
     """Record inside the open part the area of the longest bars against a third of all."""
     side, sheet = site.side, site.writers.sheet
-    steps = Steps(sheet, site.writers.sizes)
+    steps = Steps(sheet, site.writers.sizes.get("top", {}))
     if through or side.t_kept >= point.t:
         A_pi = record_area(steps, grouped(site.writers, side.kept), "A_pi", depth=False)
     else:
@@ -123,20 +123,21 @@ def _record_third(site: Site, point: Point, *, through: bool) -> None:
 def _record_with(site: Site, point: Point, further: tuple[Ending, ...]) -> None:
     """Record in a part that a third of the steel passes the point, with bars that end past it."""
     side, sheet, writers = site.side, site.writers.sheet, site.writers
+    sizes = writers.sizes.get("top", {})
     ending = further[-1]
     runs = (*(run for each in further for run in each.runs), *side.kept)
     with sheet.part(f"{site.key}-third", f"{site.title}: a third past the inflection"):
         sheet.note(
             "bars-text", f"{text_of(runs)} pass the point of inflection.", title="Bars counted"
         )
-        steps = Steps(sheet, dict(writers.span(side.span)) | dict(writers.sizes) | site.section)
+        steps = Steps(sheet, dict(writers.span(side.span)) | dict(sizes) | site.section)
         steps.bind(x_t=site.given("x_t", point.t, _source(site, point)))
         shortest = "as laid, the first of them to end"
         steps.bind(x_e=site.given("x_e", ending.t, shortest))
         steps.bind(d_b=site.bar(thickest(runs))["d_b"])
         steps.line(clause.PAST_OUTWARD)
         _record_length(steps)
-        area = Steps(sheet, writers.sizes)
+        area = Steps(sheet, sizes)
         A_pi = record_area(area, grouped(writers, runs), "A_pi", depth=False)
         area.bind(A_pi=A_pi, A_s=site.section["A_s"])
         area.check(clause.TOP_PAST_INFLECTION)

@@ -78,7 +78,7 @@ def begin(writers: Writers, sheet: Sheet, span: int, face: Face) -> Steps:
     place |= {"b": b_w, "b_w": b_w}
     if face == "bottom" and outline.h_f:
         place |= {"b": place["b_f"], "h_f": sheet.find("h_f")}
-    steps = Steps(sheet, place | dict(writers.sizes))
+    steps = Steps(sheet, place | dict(writers.sizes.get(face, {})))
     if "d_bs" not in steps.place:
         stirrup = writers.designed.basis.stirrups.size
         steps.bind(d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))

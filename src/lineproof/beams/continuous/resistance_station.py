@@ -176,7 +176,8 @@ def _available(laid: Laid, bars: Standing, x: float) -> tuple[float, Entry]:
         return length, laid.hooked[support, bars.run.size]
     if lap and length < rise and rise > recorded["l_s"].value:
         return length, _overlap(writers.sheet, rise)
-    return length, recorded["l_s" if lap else "l_d"]
+    short = lap and length < recorded["l_s"].value  # else developed in full by either length
+    return length, recorded["l_s" if short else "l_d"]
 
 
 def _overlap(sheet: Sheet, length: float) -> Entry:

@@ -54,7 +54,8 @@ AT_GIRDER = (
 )
 _SAME = 1e-9
 DEPTH = "depth-"
-_WITH_DEPTHS = ("sag-", "hog-", DEPTH)
+_FACES = {"bottom": "sag-", "top": "hog-"}
+"""How the keys of the sections of flexure with a face in tension begin."""
 THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
     "far as moment, shear and torsion together ask for, and the bars in the corners of the "
@@ -155,12 +156,12 @@ def record_one_section(design: Design, section: ShearSection, more: Mapping[str,
 def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:
     """Return the depth of the section from the bars of a section of flexure.
 
-    It stands there already, or is recorded in a part of its own where several sizes or layers have
-    it; None for bars of one size alone.
+    It stands there already, of bars on the face in tension, or is recorded in a part of its own
+    where several sizes or layers have it; None for bars of one size alone.
     """
     sheet, designed, span = design.model.sheet, design.designed, section.span
-    for part in sheet.parts:
-        known = part.entries.get("d") if part.key.startswith(_WITH_DEPTHS) else None
+    for key in _nearest_first(section, [part.key for part in sheet.parts]):
+        known = sheet.entries_of(key).get("d")
         if known is not None and _is_depth(known.value, section):
             return known
     for where, groups, d in _several(design, section):
@@ -174,6 +175,20 @@ def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:
             record_groups(steps, [(group, None) for group in groups], "the section")
         return sheet.entries_of(f"{DEPTH}{section.key}")["d"]
     return None
+
+
+def _nearest_first(section: ShearSection, keys: Iterable[str]) -> list[str]:
+    """Return the parts that may hold the depth of a section, those of its span and end first."""
+    support = section.span if section.end == "left" else section.span + 1
+    side = "right" if section.end == "left" else "left"
+    own = (f"sag-{section.span}", f"hog-{support}-{side}", f"hog-{support}-")
+    faces = ("sag-", "hog-") if section.mixed else (_FACES[section.tension],)
+    kept = [key for key in keys if key.startswith((*faces, DEPTH))]
+
+    def far(key: str) -> int:
+        return next((n for n, start in enumerate(own) if key.startswith(start)), len(own))
+
+    return sorted(kept, key=far)
 
 
 def _several(
