@@ -69,7 +69,8 @@ def turned_checks(beam: beams.ContinuousBeam) -> list[Entry]:
         for part in beam.sheet.parts
         if part.key.startswith("shear-")
         for entries in [beam.sheet.entries_of(part.key)]
-        if "bars-tension-side" in entries and "bottom is in tension" in entries["case"].source.text
+        if {"bars-tension-side", "case"} <= set(entries)
+        and "bottom is in tension" in entries["case"].source.text
     ]
 
 
