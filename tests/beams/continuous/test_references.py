@@ -43,3 +43,29 @@ def test_anchorage_takes_the_sizes_of_its_face(sheet: Sheet) -> None:
     }  # fmt: skip
     for found in titles.values():
         assert all(title.startswith("Development of bottom bars 20M") for title in found)
+
+
+def test_resistance_of_the_shear_stands_only_where_it_is_used(sheet: Sheet) -> None:
+    """V_r, V_s, theta of the shear chapter, and depths of bars counted, go into a later line."""
+    looked_at = 0
+    for part in sheet.parts:
+        if part.key.startswith(("anchorage-", "coverage-")):
+            used = {arg.id for entry in part.entries.values() for arg in entry.args}
+            own = [e for n, e in part.entries.items() if n in ("V_r", "V_s", "theta", "d_1", "d_2")]
+            assert [e.id for e in own if e.id not in used] == []
+            looked_at += len(own)
+    assert looked_at > 10
+
+
+def test_resistance_of_the_shear_names_place_and_case(sheet: Sheet) -> None:
+    """Stirrups at the face of support 1: the smallest V_s is that of live load on spans 1 and 3.
+
+    V_f = 140.67 kN, M_f < V_f d_v, 1050 mm2: eps_x = 140 670/(200 000 x 1050) = 0.000 669 9;
+    theta = 33.69 deg; V_s = 0.85 x 200 x 400 x 512.06 x cot(33.69)/350 = 149.2 kN.
+    """
+    entries = sheet.entries_of("anchorage-end-1-bottom")
+    assert entries["V_s"].value == pytest.approx(149.2e3, abs=50)
+    told = entries["V_s"].source.origin
+    assert "in 1.25D + 1.5L, live load on spans 1, 3; 0.20 to 0.25 m from support 1" in told
+    assert "taken by itself: on the safe side" in told
+    assert "V_r" not in entries

@@ -95,3 +95,17 @@ def test_an_assumed_restraint_adds_its_moment_over_the_span() -> None:
     numbers = span_numbers(design.model, design.designed, design.runs)
     found = [x for each in numbers for x in (each.left.restraint, each.right.restraint)]
     assert found == pytest.approx([15132.6, 0, 0, 0, 0, 15132.6], abs=0.1)
+
+
+def test_a_symmetrical_beam_resists_alike_at_mirrored_places() -> None:
+    """Clear spans of 7175 mm are no multiple of 50 mm: stations go from both faces to midspan."""
+    beam = start()
+    run(beam, CALLS[: CALLS.index("shear") + 1])
+    designed = beam.design.designed
+    total = designed.outline.axes[-1]
+    found = {(round(s.start, 3), round(s.end, 3)): (s.V_r, s.V_s, s.theta) for s in designed.shear}
+    mirrored = {
+        (round(total - s.end, 3), round(total - s.start, 3)): (s.V_r, s.V_s, s.theta)
+        for s in designed.shear
+    }
+    assert found == mirrored

@@ -4,10 +4,9 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
-from lineproof.beams.continuous.anchorage_record import Writers, record_stretch
+from lineproof.beams.continuous.anchorage_record import Writers
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.detailing_data import ShearStretch
 from lineproof.beams.continuous.detailing_record import record_detailing, record_lengths_and_ends
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
@@ -46,13 +45,4 @@ def _writers(design: Design) -> Writers:
     def section(number: int, row: int, column: int, key: str) -> Mapping[str, Entry]:
         return record_further(design, number, (row, column), key)
 
-    return Writers(
-        model.sheet, design.designed, span, forces, _record_shear, torsion=torsion, section=section
-    )
-
-
-def _record_shear(steps: Steps, stretch: ShearStretch) -> None:
-    """Record what the stirrups of the shear chapter resist over a stretch, rounded down."""
-    place = f"{stretch.start / 1000:.2f} to {stretch.end / 1000:.2f} m from support 1"
-    source = f"shear chapter, smallest of each over all load cases, {place}"
-    record_stretch(steps, stretch, source)
+    return Writers(model.sheet, design.designed, span, forces, torsion=torsion, section=section)

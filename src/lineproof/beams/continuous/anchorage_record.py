@@ -6,6 +6,7 @@ import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from decimal import Decimal
+from typing import Literal
 
 from lineproof.beams.bars import spaced
 from lineproof.beams.continuous.anchorage import (
@@ -74,14 +75,22 @@ def forces_as_given(steps: Steps, demand: Demand, near: End, x: Entry | None = N
     steps.bind(M_f=M_f, V_f=V_f)
 
 
-def record_stretch(steps: Steps, stretch: ShearStretch, source: str = "shear") -> None:
-    """Record V_r, V_s and theta of a stretch as given numbers from ``source``, and bind them."""
-    sheet = steps.sheet
-    steps.bind(
-        V_r=sheet.given("V_r", plain(stretch.V_r / 1e3, "kN"), source=source),
-        V_s=sheet.given("V_s", plain(stretch.V_s / 1e3, "kN"), source=source),
-        theta=sheet.given("theta", plain(stretch.theta, "deg"), source=source),
-    )
+Resisting = Literal["V_r", "V_s", "theta"]
+
+
+def record_stretch(steps: Steps, stretch: ShearStretch, names: Sequence[Resisting]) -> None:
+    """Record those of V_r, V_s and theta of a stretch that are asked for, and bind them."""
+    values = {
+        "V_r": plain(stretch.V_r / 1e3, "kN"),
+        "V_s": plain(stretch.V_s / 1e3, "kN"),
+        "theta": plain(stretch.theta, "deg"),
+    }
+    where = f"{stretch.start / 1000:.2f} to {stretch.end / 1000:.2f} m from support 1"
+    alone = ", taken by itself: on the safe side" if len(names) > 1 else ""
+    for name in names:
+        case = f", in {stretch.cases[name]}" if name in stretch.cases else ""
+        source = f"shear chapter, the smallest of all load cases{case}; {where}{alone}"
+        steps.bind(**{name: steps.sheet.given(name, values[name], source=source)})
 
 
 @dataclass(frozen=True, eq=False)
@@ -89,7 +98,7 @@ class Writers:
     """How other chapters record what anchorage rests on.
 
     ``span`` gives the entries of a span (h, l, l_n, b_f, b_o); ``forces`` records M_f and V_f of
-    a demand and binds them; ``shear`` records V_r, V_s and theta of a stretch and binds them.
+    a demand and binds them; ``shear`` those asked for of V_r, V_s and theta of a stretch.
     ``torsion`` records the torsion of a demand at the face of a support and binds T_f, p_h, A_o.
     ``section`` returns the entries of a section of shear by span, case and column of its check; it
     is recorded in a part of the key given where it is not yet.
@@ -99,7 +108,7 @@ class Writers:
     designed: Designed
     span: Callable[[int], Mapping[str, Entry]]
     forces: Callable[[Steps, Demand, End, Entry | None], None] = forces_as_given
-    shear: Callable[[Steps, ShearStretch], None] = record_stretch
+    shear: Callable[[Steps, ShearStretch, Sequence[Resisting]], None] = record_stretch
     sizes: Mapping[str, Mapping[str, Entry]] = field(default_factory=dict)
     """Diameters and areas recorded for a face: ``d_b 25M``, ``A_b 25M``, and ``d_bs``."""
     torsion: Callable[[Steps, Demand, End], None] | None = None

@@ -179,7 +179,7 @@ def _record_angle(site: Site, steps: Steps, place: float) -> None:
     designed = site.writers.designed
     stretch = stretch_at(designed, place)
     if designed.shear:
-        site.writers.shear(steps, stretch)
+        site.writers.shear(steps, stretch, ("theta",))
     else:
         angle = site.writers.sheet.given("theta", plain(stretch.theta, "deg"), source="11.3.6.3")
         steps.bind(theta=angle)
@@ -230,7 +230,7 @@ def _record_low_shear(site: Site, key: str, t: float) -> None:
     with site.writers.sheet.part(shear_key(key), f"{site.title}: end in the tension zone"):
         steps = _at_end(site, t, _rows_at(site, t)[1])
         if site.writers.designed.shear:
-            steps.check(clause.CUT_AT_LOW_SHEAR)
+            _resisting(site, steps, t).check(clause.CUT_AT_LOW_SHEAR)
         else:
             _fail_without_shear(site)
 
@@ -242,21 +242,26 @@ def _fail_without_shear(site: Site) -> None:
 
 
 def _at_end(site: Site, t: float, row: int) -> Steps:
-    """Record inside the open part the forces of a case at an end of bars, and V_r there."""
+    """Record inside the open part the forces of a case at an end of bars."""
     side = site.side
     steps = begin(site.writers, site.writers.sheet, side.span, side.face)
     x = site.given("x_e", t)
     site.writers.forces(steps, site.demand(t, row), side.near, x)
-    if site.writers.designed.shear:
-        place = along(site.writers.designed, side.span, side.near, t)
-        site.writers.shear(steps, stretch_at(site.writers.designed, place))
+    return steps
+
+
+def _resisting(site: Site, steps: Steps, t: float) -> Steps:
+    """Record inside the open part V_r at an end of bars; return the steps."""
+    designed, side = site.writers.designed, site.side
+    place = along(designed, side.span, side.near, t)
+    site.writers.shear(steps, stretch_at(designed, place), ("V_r",))
     return steps
 
 
 def _record_double_area(site: Site, key: str, t: float, continuing: Sequence[BarRun]) -> None:
     by_moment, by_shear = _rows_at(site, t)
     with site.writers.sheet.part(shear_key(key), f"{site.title}: shear at the end"):
-        _at_end(site, t, by_shear).check(clause.CUT_AT_MODERATE_SHEAR)
+        _resisting(site, _at_end(site, t, by_shear), t).check(clause.CUT_AT_MODERATE_SHEAR)
     with site.writers.sheet.part(f"{key}-area", f"{site.title}: steel at the end"):
         steps = _at_end(site, t, by_moment)
         A = record_area(steps, grouped(site.writers, continuing), "A_co")

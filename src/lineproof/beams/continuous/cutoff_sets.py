@@ -168,10 +168,12 @@ def record_resistance(steps: Steps, writers: Writers, face: Face) -> Entry:
     return steps.line(flexure.M_R_TEE)
 
 
-def record_developed(steps: Steps, rows: Iterable[tuple[Group, float, Entry]]) -> Entry:
+def record_developed(
+    steps: Steps, rows: Iterable[tuple[Group, float, Entry]], *, depth: bool = True
+) -> Entry:
     """Record the developed area of groups: each with the length available and that needed.
 
-    Binds A_sd, A_s (the same) and d.
+    Binds A_sd, A_s (the same) and, if asked, d.
     """
     kept = tuple(rows)
     groups = tuple(group for group, _, _ in kept)
@@ -189,8 +191,9 @@ def record_developed(steps: Steps, rows: Iterable[tuple[Group, float, Entry]]) -
         areas.append(steps.line(development.DEVELOPED_AREA, symbol, A_s=A_s, l_av=l_av, l_d=needed))
     if len(kept) == 1:
         A = areas[0]
-        steps.bind(d=_record_depth(steps, groups[0], "d", ""))
+        if depth:
+            steps.bind(d=_record_depth(steps, groups[0], "d", ""))
     else:
-        A = _summed(steps, groups, areas, "A_sd", depth=True)
+        A = _summed(steps, groups, areas, "A_sd", depth=depth)
     steps.bind(A_sd=A, A_s=A)
     return A

@@ -267,7 +267,7 @@ def record_end_bottom(site: Site, hooked: Hooks) -> None:
             l_av = half - distance(designed, side.span, side.near, tip(run, side.near))
             rows.append((group, l_av, needed))
         if rows:
-            record_developed(steps, rows)
+            record_developed(steps, rows, depth=False)
         else:
             steps.bind(A_sd=sheet.given("A_sd", "0 mm2", source="no bars reach the face"))
         steps.check(shear_bars.END_SUPPORT_HOLDS)
@@ -286,7 +286,7 @@ def _record_end_force(site: Site, steps: Steps) -> None:
     place = designed.outline.axes[side.span - 1] + x + step
     stretch = stretch_at(designed, place)
     if designed.shear:
-        site.writers.shear(steps, stretch)
+        site.writers.shear(steps, stretch, ("V_s", "theta"))
     else:
         steps.bind(
             V_s=site.writers.sheet.given("V_s", "0 kN", source="no stirrups counted"),

@@ -89,13 +89,17 @@ class SectionBars:
 
 @dataclass(frozen=True, slots=True)
 class ShearStretch:
-    """Shear resistance over a stretch of the beam: whole, of the stirrups, and the angle."""
+    """Shear resistance over a stretch of the beam: whole, of the stirrups, and the angle.
+
+    Each is the smallest of all cases by itself; ``cases`` says of which, by symbol.
+    """
 
     start: float
     end: float
     V_r: float
     V_s: float
     theta: float = THETA
+    cases: Mapping[str, str] = field(default_factory=dict, compare=False)
 
 
 @dataclass(frozen=True, eq=False, slots=True)

@@ -95,7 +95,7 @@ def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
             sheet.note("no-bars", laid.none_stand(station), title="Gap")
             steps = begin(writers, sheet, station.span, face)
         else:
-            steps = _developed(laid, station)
+            steps = _developed(laid, station, depth=True)
             record_resistance(steps, writers, face)
         x = _record_place(writers, station, near, t)
         writers.forces(steps, _demand(writers, station, tension=False), near, x)
@@ -130,8 +130,11 @@ def _demand(writers: Writers, station: Station, *, tension: bool) -> Demand:
     return max(both, key=lambda d: abs(d.V))
 
 
-def _developed(laid: Laid, station: Station) -> Steps:
-    """Record inside the open part the bars of a station, counted as far as they are developed."""
+def _developed(laid: Laid, station: Station, *, depth: bool = False) -> Steps:
+    """Record inside the open part the bars of a station, counted as far as they are developed.
+
+    Their depth as well where it is asked for.
+    """
     writers = laid.writers
     steps = begin(writers, writers.sheet, station.span, station.face)
     rows: dict[tuple[Group, float, str], tuple[Group, float, Entry]] = {}
@@ -158,7 +161,7 @@ def _developed(laid: Laid, station: Station) -> Steps:
         none = writers.sheet.given("A_sd", "0 mm2", source="no bars count here")
         steps.bind(A_sd=none, A_s=none)
         return steps
-    record_developed(steps, rows.values())
+    record_developed(steps, rows.values(), depth=depth)
     return steps
 
 
@@ -245,7 +248,7 @@ def record_turned(laid: Laid, station: Station, key: str, title: str) -> None:
 def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:
     stretch = stretch_at(writers.designed, station.x)
     if writers.designed.shear:
-        writers.shear(steps, stretch)
+        writers.shear(steps, stretch, ("V_s", "theta"))
         return
     steps.bind(
         V_s=writers.sheet.given("V_s", "0 kN", source="no stirrups counted"),

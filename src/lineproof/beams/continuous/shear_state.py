@@ -239,9 +239,9 @@ def _along(
     """
     extra, ends = more
     curves = forces.solved.solution.span(span)
-    steps = np.arange(faces[0], faces[1], STEP)
+    steps = _steps(*faces)
     inner = [b for b in curves.breaks.tolist() if faces[0] < b < faces[1]]
-    right = [*ends[1].stations, *sorted({*steps.tolist(), faces[1], *inner, *extra})]
+    right = [*ends[1].stations, *sorted({*steps, *inner, *extra})]
     left = [*ends[0].stations, *inner, faces[1]]
     pairs = forces.along(span, np.array(left), "left"), forces.along(span, np.array(right), "right")
     x = np.array([*left, *right])
@@ -251,6 +251,12 @@ def _along(
     M, V = (np.hstack([pair[k] for pair in pairs])[:, order] for k in (0, 1))
     sides: tuple[Side, ...] = tuple("left" if n < len(left) else "right" for n in order)
     return x[order], sides, M, V
+
+
+def _steps(start: float, end: float) -> list[float]:
+    """Return stations from both faces to midspan, so that a symmetrical span has like ones."""
+    half = np.arange(0.0, (end - start) / 2, STEP)
+    return [*(start + half).tolist(), *(end - half).tolist()]
 
 
 def _torsion_along(

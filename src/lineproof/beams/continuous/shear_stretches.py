@@ -260,11 +260,14 @@ def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ..
         for i, (start, end) in enumerate(pairwise(columns.tolist())):
             both = [i, i + 1]
             if end - start > _SHORT:
+                least = {"V_r": V_r[:, both], "V_s": V_s[:, both], "theta": v["theta"][:, both]}
+                rows = {name: int(each.min(axis=1).argmin()) for name, each in least.items()}
                 made.append(
                     ShearStretch(
-                        start, end, _down(V_r[:, both].min(), PRINTED_FORCE),
-                        _down(V_s[:, both].min(), PRINTED_FORCE),
-                        _down(v["theta"][:, both].min(), PRINTED_ANGLE),
+                        start, end, _down(least["V_r"].min(), PRINTED_FORCE),
+                        _down(least["V_s"].min(), PRINTED_FORCE),
+                        _down(least["theta"].min(), PRINTED_ANGLE),
+                        {name: str(check.state.cases[row]) for name, row in rows.items()},
                     )
                 )  # fmt: skip
     return tuple(made)
