@@ -349,6 +349,13 @@ INTERFACE = (
         "1088.6*300/(900 - 300) = 544.3",
     ),
     W("interface.OVERHANG_TENSION", {**S, "n_o": 3, "A_b": 200}, "0.85*3*200*0.4 = 204"),
+    W("interface.LENGTH", {"x_vz": 200, "x_vm": 3144}, "max(200 - 3144, 3144 - 200)/1000 = 2.944"),
+    W(
+        "interface.LENGTH_RESTRAINED",
+        {"l": 7.6, "n_rm": 24, "b_sp": 400},
+        "max(15.2/24 - 0.2, 7.6/24) = max(0.43333, 0.31667) = 0.43333",
+    ),
+    W("interface.LENGTH_QUARTER", {"l_n": 7.175}, "7.175/4 = 1.79375"),
     W(
         "interface.STRESS",
         {"F_o": 284.65, "h_f": 130, "l_vf": 1.9},

@@ -2,16 +2,18 @@
 
 from __future__ import annotations
 
-import math
-
 import pytest
 
 from lineproof.beams.continuous.interface import (
+    Beside,
     SlabBars,
-    length_beside_sag,
+    beside_hog,
+    beside_sag,
     read_slab_bars,
     record_interface,
     record_interface_top,
+    record_length,
+    record_restrained_length,
 )
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
@@ -32,8 +34,8 @@ def test_independent_check_13() -> None:
     """2 x 10M at 250 in 130 mm: rho_v 0.00615, sigma 2.46, 2.89 MPa; 284.65 kN: 1.152 MPa."""
     sheet, slab = new_sheet(CHECKED), read_slab_bars("slab_bars", "2 x 10M at 250 mm")
     with sheet.part("interface-1", "Flange and web of span 1"):
-        steps = place(sheet, A_s="2000 mm2", b="2150 mm", b_o="900 mm", h_f="130 mm")
-        record_interface(steps, slab, 1900.0, block_in_web=False)
+        steps = place(sheet, A_s="2000 mm2", b="2150 mm", b_o="900 mm", h_f="130 mm", l_vf="1.9 m")
+        record_interface(steps, slab, block_in_web=False)
     made = sheet.close()
     assert number(made, "interface-1/rho_v") == pytest.approx(0.00615, abs=5e-6)
     assert number(made, "interface-1/sigma") == pytest.approx(2.46, abs=5e-3)
@@ -47,12 +49,14 @@ def test_block_in_the_web_and_bars_in_the_overhang() -> None:
     """1088.6 x 300/600 = 544.3 kN; 3-15M in the overhang: 0.85 x 3 x 200 x 0.4 = 204 kN."""
     sheet, slab = new_sheet(CHECKED), SlabBars(1, "10M", 250.0)
     with sheet.part("interface-1", "Sagging"):
-        steps = place(sheet, C_f="1088.6 kN", b="900 mm", b_o="300 mm", b_w="300 mm", h_f="100 mm")
-        record_interface(steps, slab, 2000.0, block_in_web=True)
+        steps = place(
+            sheet, C_f="1088.6 kN", b="900 mm", b_o="300 mm", b_w="300 mm", h_f="100 mm", l_vf="2 m"
+        )
+        record_interface(steps, slab, block_in_web=True)
     with sheet.part("interface-top-3", "Hogging"):
-        steps = place(sheet, n_o="3", h_f="100 mm")
+        steps = place(sheet, n_o="3", h_f="100 mm", l_vf="1.5 m")
         steps.bind(A_b=sheet.given("A_bt", "200 mm2"))
-        record_interface_top(steps, slab, 1500.0)
+        record_interface_top(steps, slab)
     made = sheet.close()
     assert number(made, "interface-1/F_o") == pytest.approx(544.3, abs=1)
     assert number(made, "interface-top-3/F_o") == pytest.approx(204, abs=0.5)
@@ -61,16 +65,44 @@ def test_block_in_the_web_and_bars_in_the_overhang() -> None:
 def test_length_beside_the_largest_moment() -> None:
     """One simple span of 6 m between faces: half of it; two spans, dead alone: 3/8 l to the end.
 
-    Two spans: M is largest at 3/8 l and zero at 3/4 l, so the length is 3/8 x 6 = 2.25 m less the
-    half width of the support at the end, 2.25 m at the other side.
+    Two spans: M is largest at 3/8 l = 2.25 m and zero at 3/4 l = 4.5 m, so the length is 2.25 m
+    less the half width of the support at the end, 2.25 m at the other side. Over the middle support
+    M is zero 1.5 m from its axis, 1.3 m from the face.
     """
     one = case_of((6000.0,), uniform((6000.0,), 10, 0), width=0.0, combinations=DEAD_ONLY)
-    assert length_beside_sag(one.forces, 1) == pytest.approx(3000.0)
+    found = beside_sag(one.forces, 1)
+    assert found.at == pytest.approx(3000.0)
+    assert found.zero == 0.0
+    assert found.at_face
     lengths = (6000.0, 6000.0)
     two = case_of(lengths, uniform(lengths, 10, 0), width=400.0, combinations=DEAD_ONLY)
-    assert length_beside_sag(two.forces, 1) == pytest.approx(2050.0)
-    assert length_beside_sag(two.forces, 2) == pytest.approx(2050.0)
-    assert math.isclose(3 / 8 * 6000 - 200, 2050)
+    for span, at, zero in ((1, 2250.0, 200.0), (2, 3750.0, 5800.0)):
+        found = beside_sag(two.forces, span)
+        assert found.at == pytest.approx(at)
+        assert found.zero == pytest.approx(zero)
+    hog = beside_hog(two.forces, 2, "right")
+    assert hog.at == pytest.approx(200.0)
+    assert hog.zero == pytest.approx(1500.0)
+    assert not hog.at_face
+
+
+def test_lengths_as_lines() -> None:
+    """From places on whole mm, the zero towards the moment: |1499 - 200| = 1299 mm of 1299.6.
+
+    At a girder M = w l^2/24: 2 x 7600/24 - 400/2 = 433.33 mm. No zero: 7.2/4 = 1.8 m.
+    """
+    sheet = new_sheet(CHECKED)
+    with sheet.part("between", "Between places"):
+        record_length(place(sheet), Beside(200.0, 1499.6, "1.25D + 1.5L"))
+    with sheet.part("restrained", "Restrained"):
+        record_restrained_length(place(sheet, l="7.6 m", b_sp="400 mm"), 24.0)
+    with sheet.part("nowhere", "No zero"):
+        record_length(place(sheet, l_n="7.2 m"), Beside(200.0, None, "1.4D"))
+    assert sheet.entry("between/l_vf").value == pytest.approx(1299)
+    assert "1.25D + 1.5L" in sheet.entry("between/x_vz").source.origin
+    assert sheet.entry("restrained/l_vf").value == pytest.approx(433.33, abs=0.01)
+    assert sheet.entry("nowhere/l_vf").value == pytest.approx(1800)
+    assert not list(faults(sheet.close().data))
 
 
 @pytest.mark.parametrize(

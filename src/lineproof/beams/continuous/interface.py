@@ -2,17 +2,19 @@
 
 from __future__ import annotations
 
+import math
 import re
 from dataclasses import dataclass
 
 import numpy as np
 
-from lineproof.beams.continuous.forces import Forces
+from lineproof.beams.continuous.forces import End, Forces
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.formula import FROM_MEMORY
 from lineproof.quantity import echo, read_quantity
 from lineproof.standards.a23_3 import bars, interface
+from lineproof.standards.references import MECHANICS
 
 NOT_COVERED = {"check": "Shear between flange and web", "clause": "11.5"}
 """What is said where the bars of the slab are not given."""
@@ -22,6 +24,10 @@ _SLAB_BARS = re.compile(
 _NOTE = (
     "Counted are only transverse bars of the slab that its own bending does not need there; they "
     "reach past the web and into the overhang by their development length."
+)
+_RESTRAINED = (
+    "The assumed moment of restraint w l²/n falls off by the shear w l/2 at the end: it is zero "
+    "2 l/n from the axis of the support."
 )
 
 
@@ -60,52 +66,103 @@ def read_slab_bars(name: str, text: object) -> SlabBars:
     return SlabBars(int(match["layers"] or 1), size, spacing)
 
 
-def length_beside_sag(forces: Forces, span: int) -> float:
-    """Return the shorter distance from the largest sagging moment of a span to a zero moment [mm].
+@dataclass(frozen=True, slots=True)
+class Beside:
+    """The largest moment of a load case and its zero beside it, from the left axis [mm].
 
-    Of the case that has the largest moment; the force of the flange enters over this length.
+    ``zero`` is None where the moment is zero nowhere in the span; ``at_face`` where it is taken as
+    zero at the face of a support, since it does not change its sign before.
+    """
+
+    at: float
+    zero: float | None
+    case: str
+    at_face: bool = False
+
+
+def beside_sag(forces: Forces, span: int) -> Beside:
+    """Return the largest sagging moment of a span and the nearer of the places of zero moment.
+
+    Both are of the case that has the largest moment; the force of the flange enters over the
+    length between them.
     """
     most = forces.sag(span)
     curves = forces.solved.solution.span(span)
-    start, end = forces.beam.faces(span)
-    zeros = np.array([start, *curves.inflections(most.row), end])
+    faces = forces.beam.faces(span)
+    zeros = np.array([faces[0], *curves.inflections(most.row), faces[1]])
     left, right = zeros[zeros < most.x], zeros[zeros > most.x]
-    lengths = [most.x - left.max()] if len(left) else []
-    lengths += [right.min() - most.x] if len(right) else []
-    if not lengths:
+    found = [float(side) for side in (*left[-1:], *right[:1])]
+    if not found:
         raise UserError(f"span {span}: its largest moment has no length beside it")
-    return float(min(lengths))
+    zero = min(found, key=lambda x: abs(most.x - x))
+    return Beside(most.x, zero, str(most.case), zero in faces)
 
 
-def record_interface(steps: Steps, slab: SlabBars, length: float, *, block_in_web: bool) -> None:
+def beside_hog(forces: Forces, support: int, side: End) -> Beside:
+    """Return the largest moment of a face of a support and the nearest place of zero moment."""
+    demand = forces.hog(support, side)
+    zeros = forces.solved.solution.span(demand.span).inflections(demand.row)
+    start, end = forces.beam.faces(demand.span)
+    inside = [float(x) for x in zeros if start < x < end]
+    zero = min(inside, key=lambda x: abs(x - demand.x), default=None)
+    return Beside(demand.x, zero, str(demand.case))
+
+
+def record_length(steps: Steps, beside: Beside) -> None:
+    """Record inside the open part the length l_vf over which the force enters, and bind it.
+
+    From places on whole mm, the zero rounded towards the moment: to the safe side. Needs l_n where
+    the moment is zero nowhere.
+    """
+    sheet = steps.sheet
+    if beside.zero is None:
+        steps.line(interface.LENGTH_QUARTER)
+        return
+    at = float(round(beside.at))
+    zero = math.floor(beside.zero) if beside.zero > at else math.ceil(beside.zero)
+    what = "face of the support" if beside.at_face else "found along the span"
+    steps.bind(
+        x_vm=sheet.given("x_vm", f"{at:.12g} mm", source=f"found along the span, {beside.case}"),
+        x_vz=sheet.given("x_vz", f"{zero:.12g} mm", source=f"{what}, {beside.case}"),
+    )
+    steps.line(interface.LENGTH)
+
+
+def record_restrained_length(steps: Steps, share: float) -> None:
+    """Record inside the open part the length l_vf at an end with an assumed restraint; bind it.
+
+    The moment w l^2/n falls off by the shear w l/2: it is zero 2 l/n from the axis. ``share`` is n.
+    Needs ``l`` and b_sp.
+    """
+    sheet = steps.sheet
+    sheet.note("restraint-length", _RESTRAINED, title="Length", basis=MECHANICS)
+    steps.bind(n_rm=sheet.given("n_rm", f"{share:g}", source="coefficient of the restraint"))
+    steps.line(interface.LENGTH_RESTRAINED)
+
+
+def record_interface(steps: Steps, slab: SlabBars, *, block_in_web: bool) -> None:
     """Record inside the open part the plane between flange and web in sagging moment.
 
-    Needs ``A_s`` (bottom bars), ``b`` (flange), b_o, b_w and h_f in place, and C_f where the stress
-    block reaches into the web. ``length`` [mm] is that of :func:`length_beside_sag`. The bars are
-    taken at yield.
+    Needs ``A_s`` (bottom bars), ``b`` (flange), b_o, b_w, h_f and l_vf in place, and C_f where the
+    stress block reaches into the web. The bars are taken at yield.
     """
     steps.line(interface.OVERHANG_BLOCK_IN_WEB if block_in_web else interface.OVERHANG_IN_FLANGE)
-    _record_plane(steps, slab, length)
+    _record_plane(steps, slab)
 
 
-def record_interface_top(steps: Steps, slab: SlabBars, length: float) -> None:
+def record_interface_top(steps: Steps, slab: SlabBars) -> None:
     """Record inside the open part the same for top bars that lie in the overhang.
 
-    Needs n_o, ``A_b`` of the top bars and h_f in place; ``length`` [mm] runs from the face of the
-    support to the point of inflection.
+    Needs n_o, ``A_b`` of the top bars, h_f and l_vf in place.
     """
     steps.line(interface.OVERHANG_TENSION)
-    _record_plane(steps, slab, length)
+    _record_plane(steps, slab)
 
 
-def _record_plane(steps: Steps, slab: SlabBars, length: float) -> None:
+def _record_plane(steps: Steps, slab: SlabBars) -> None:
     sheet = steps.sheet
     sheet.note("slab-bars", _NOTE, title=f"Slab: {slab}", clause="11.5", basis=FROM_MEMORY)
-    l_vf = sheet.given(
-        "l_vf", f"{length / 1000:.6g} m", source="largest moment to zero moment, shorter side"
-    )
     steps.bind(
-        l_vf=l_vf,
         n_f=sheet.given("n_f", str(slab.layers)),
         s_f=sheet.given("s_f", f"{slab.spacing:.12g} mm"),
         A_b=sheet.lookup("A_b", bars.BARS, slab.size),

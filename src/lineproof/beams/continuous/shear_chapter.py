@@ -23,9 +23,12 @@ from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.groups import Group, groups_of
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.interface import (
-    length_beside_sag,
+    beside_hog,
+    beside_sag,
     record_interface,
     record_interface_top,
+    record_length,
+    record_restrained_length,
 )
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
@@ -352,14 +355,15 @@ def _record_interfaces(design: Design) -> None:
         with sheet.part(f"interface-{span}", f"Span {span}: flange and web in sagging moment"):
             steps = _flange_steps(sheet, model, span)
             steps.bind(**{n: entries[n] for n in ("A_s", "C_f") if n in entries})
-            length = length_beside_sag(model.forces, span)
-            record_interface(steps, slab, length, block_in_web="C_f" in entries)
+            record_length(steps, beside_sag(model.forces, span))
+            record_interface(steps, slab, block_in_web="C_f" in entries)
     for face in _faces_with_overhang(model):
         entries = sheet.entries_of(face.key)
         with sheet.part(f"interface-{face.key}", f"{face.name.capitalize()}: flange and web"):
             steps = _flange_steps(sheet, model, face.span)
             steps.bind(n_o=entries["n_o"], A_b=entries.get("A_bo", entries["A_b"]))
-            record_interface_top(steps, slab, _to_inflection(model, face.support, face.side))
+            _record_to_inflection(steps, model, face)
+            record_interface_top(steps, slab)
 
 
 def _flange_steps(sheet: Sheet, model: Model, span: int) -> Steps:
@@ -369,22 +373,11 @@ def _flange_steps(sheet: Sheet, model: Model, span: int) -> Steps:
     return Steps(sheet, place)
 
 
-def _to_inflection(model: Model, support: int, side: str) -> float:
-    """Return the distance from a face to where the moment of its governing case is zero [mm].
-
-    A moment of restraint w l^2/n that is assumed falls off over M/V = (w l^2/n)/(w l/2) = 2 l/n
-    from the axis; from the face it is half the support shorter, at least half of it.
-    """
-    if support in restrained_supports(model):
-        span = support if side == "right" else support - 1
-        share = SHARES[model.inputs.supports[support - 1].carrier]
-        length: float = 2 * model.lengths[span - 1].value / share
-        half = model.forces.beam.supports[support - 1].width / 2
-        return max(length - half, length / 2)
-    demand = model.forces.hog(support, "left" if side == "left" else "right")
-    curves = model.forces.solved.solution.span(demand.span)
-    zeros = curves.inflections(demand.row)
-    start, end = model.forces.beam.faces(demand.span)
-    inside: Iterable[float] = [x for x in zeros if start < x < end]
-    apart = [abs(x - demand.x) for x in inside]
-    return min(apart, default=(end - start) / 4)
+def _record_to_inflection(steps: Steps, model: Model, face: FaceOfSupport) -> None:
+    """Record the length from a face to where the moment of its governing case is zero."""
+    support = face.support
+    if support not in restrained_supports(model):
+        record_length(steps, beside_hog(model.forces, support, face.side))
+        return
+    steps.bind(b_sp=model.sheet.entry(f"{GIVEN}/b_s{support}"), l=model.lengths[face.span - 1])
+    record_restrained_length(steps, SHARES[model.inputs.supports[support - 1].carrier])

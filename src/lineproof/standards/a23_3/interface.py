@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from functools import partial
 
-from lineproof.formula import FROM_MEMORY, criterion, formula
+from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, criterion, formula
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.notation import NOTATION
 from lineproof.standards.references import MECHANICS
@@ -102,6 +102,24 @@ OVERHANG_TENSION = _formula(
     title="Tension in one overhang, top bars at yield",
     basis=MECHANICS,
 )
+LENGTH = _formula(
+    "l_vf = abs(x_vz - x_vm)",
+    clause="11.5",
+    title="Length from the largest moment to zero moment",
+    basis=MECHANICS,
+)
+LENGTH_RESTRAINED = _formula(
+    "l_vf = max(2*l/n_rm - b_sp/2, l/n_rm)",
+    clause="11.5",
+    title="Length from the face to where the moment of restraint is zero, at least half of it",
+    basis=MECHANICS,
+)
+LENGTH_QUARTER = _formula(
+    "l_vf = l_n/4",
+    clause="11.5",
+    title="Length where the moment is zero nowhere in the span: a quarter of the clear span",
+    basis=COMMON_PRACTICE,
+)
 STRESS = _formula(
     "v_f = F_o/(h_f*l_vf)",
     clause="11.5",
@@ -130,6 +148,9 @@ FORMULAS = (
     OVERHANG_IN_FLANGE,
     OVERHANG_BLOCK_IN_WEB,
     OVERHANG_TENSION,
+    LENGTH,
+    LENGTH_RESTRAINED,
+    LENGTH_QUARTER,
     STRESS,
 )
 CRITERIA = (STRENGTH,)
