@@ -27,6 +27,8 @@ WIDEST_STIRRUPS, CLOSEST_STIRRUPS = 625.0, 75.0
 """Spacings between which stirrups are sought [mm]; 600 is the widest there may be."""
 MOST_STEEL = 6000.0
 """Area of bars up to which at least steel is sought [mm2]."""
+MORE = "or more"
+"""Said of values beyond the nearest that do as well."""
 _COARSE = 16
 _LATER = 12
 _NOT_COMPUTED = (UserError, ArithmeticError, ValueError)
@@ -47,11 +49,12 @@ class Variable:
     none: str
     bar: str = ""
 
-    def text(self, value: float, *, all_beyond: bool) -> str:
-        """Return a value in words."""
+    def text(self, value: float, *, all_beyond: bool, up_to: float | None = None) -> str:
+        """Return a value in words; ``up_to`` is the last beyond that does, where not all do."""
         told = self.words.format(f"{value:.10g}")
         told += f" {self.beyond}" if all_beyond else ""
-        return f"{told} ({self.bars(value)}-{self.bar})" if self.bar else told
+        told = f"{told} ({self.bars(value)}-{self.bar})" if self.bar else told
+        return told if up_to is None else f"{told} or more, up to {up_to:.10g} mm²"
 
     def bars(self, area: float) -> int:
         """Return the number of bars for an area."""
@@ -91,32 +94,32 @@ def down(given: float, limit: float, step: float) -> tuple[float, ...]:
 def depth(h: float, limit: float = 3000) -> Variable:
     """Return the overall depth, in steps of 10 mm."""
     none = f"no depth up to {limit:g} mm"
-    return Variable(up(h, limit, 10), "a depth of {} mm", "or more", none)
+    return Variable(up(h, limit, 10), "a depth of {} mm", MORE, none)
 
 
 def width(b_w: float, limit: float = 1500) -> Variable:
     """Return the width of the web, in steps of 10 mm."""
     none = f"no width of the web up to {limit:g} mm"
-    return Variable(up(b_w, limit, 10), "a web {} mm wide", "or more", none)
+    return Variable(up(b_w, limit, 10), "a web {} mm wide", MORE, none)
 
 
 def concrete(f_c: float, limit: float = 80) -> Variable:
     """Return the strength of the concrete, in steps of 5 MPa up to what the standard covers."""
     none = f"no concrete up to {limit:g} MPa"
-    return Variable(up(f_c, limit, 5), "concrete of {} MPa", "or more", none)
+    return Variable(up(f_c, limit, 5), "concrete of {} MPa", MORE, none)
 
 
 def steel(A_s: float, size: str, limit: float | None = None) -> Variable:
     """Return the area of the bars, told to 10 mm2 with whole bars of their size."""
     most = 4 * A_s if limit is None else limit
     none = f"no area of bars up to {most:.0f} mm²"
-    return Variable(up(A_s, most, 10), "{} mm² of bars", "or more", none, size)
+    return Variable(up(A_s, most, 10), "{} mm² of bars", MORE, none, size)
 
 
 def longer(room: float, bars: str, more: str = "") -> Variable:
     """Return by how much bars are made longer [mm], in steps of 50 mm up to the room there is."""
     none = f"no greater length of {bars}"
-    return Variable(up(0, room, 50), f"{bars} made {{}} mm longer{more}", "or more", none)
+    return Variable(up(0, room, 50), f"{bars} made {{}} mm longer{more}", MORE, none)
 
 
 def less_steel(A_s: float, size: str) -> Variable:
@@ -136,7 +139,7 @@ def spacing(s: float, limit: float = CLOSEST_STIRRUPS) -> Variable:
 def bar_count(number: int, limit: int = 20) -> Variable:
     """Return the number of bars of their size beside each other."""
     none = f"no number of bars up to {limit}"
-    return Variable(up(number, limit, 1), "{} bars of this size", "or more", none)
+    return Variable(up(number, limit, 1), "{} bars of this size", MORE, none)
 
 
 def bar_size(size: str) -> Variable:
@@ -161,15 +164,15 @@ def told(found: Sequence[Cure]) -> str:
 
     >>> told([Cure("h", 670.0, "a depth of 670 mm or more", 0.99),
     ...       Cure("f_c", None, "no concrete up to 80 MPa")])
-    'It would hold with a depth of 670 mm or more, all else and the loads as they are. No concrete \
-up to 80 MPa would do.'
+    'It would hold with a depth of 670 mm or more, all else and the loads, self weight too, as \
+they are. No concrete up to 80 MPa would do.'
     """
     able = [cure.text for cure in found if cure.value is not None]
     unable = [cure.text for cure in found if cure.value is None]
     none = f"{_sentence_case(_joined(unable))} would do" if unable else ""
     if not able:
         return f"{none} alone." if none else ""
-    others = "all else and the loads as they are"
+    others = "all else and the loads, self weight too, as they are"
     said = f"It would hold with {able[0]}, {others}."
     if len(able) > 1:
         said = f"It would hold with any one of these alone, {others}: {lettered(able)}."
@@ -218,7 +221,25 @@ def _cure(utilisation: Utilisation, symbol: str, variable: Variable) -> Cure:
     value, later = variable.values[place], variable.values[place + 1 :]
     samples = later[:: max(1, len(later) // _LATER)]
     beyond = bool(variable.beyond) and all(holds(used(x)) for x in (*samples, *later[-1:]))
-    return Cure(symbol, value, variable.text(value, all_beyond=beyond), used(value))
+    up_to = None if beyond or variable.beyond != MORE else _up_to(used, variable, later)
+    return Cure(symbol, value, variable.text(value, all_beyond=beyond, up_to=up_to), used(value))
+
+
+def _up_to(
+    used: Callable[[float], float], variable: Variable, later: Sequence[float]
+) -> float | None:
+    """Return up to which area of bars a check holds, from the least that does; None for no more.
+
+    Found by halving, told only where samples between hold as well.
+    """
+    if not variable.bar or not later or not holds(used(later[0])):
+        return None
+    low, high = 0, len(later) - 1
+    while high - low > 1:
+        middle = (low + high) // 2
+        low, high = (middle, high) if holds(used(later[middle])) else (low, middle)
+    between = later[: low + 1 : max(1, low // _LATER)]
+    return later[low] if all(holds(used(x)) for x in between) else None
 
 
 def part_used(test: Criterion, left: float, right: float) -> float:

@@ -48,7 +48,7 @@ COLUMNS = [
     "Place",
     "Check that fails",
     "Ratio",
-    "What would cure it: each alone, all else and the loads as they are",
+    "What would cure it: each alone, all else and the loads, self weight too, as they are",
 ]
 WIDTHS = (44.0, 44.0, 20.0, 0.0)
 TITLE = "What fails and what would cure it"
