@@ -57,7 +57,7 @@ def test_bending() -> None:
     assert use({}) == pytest.approx(360 / 327.4, rel=1e-4)
     assert verified(use, variables) == {"A_s": 2230, "h": 650, "b_w": None, "f_c": None}
     # the bars yield up to c = 0.636 d = 340.45 mm: a = 0.8825 c = 300.45 mm, A_s = 6350.1 a/340 =
-    # 5611 mm2, less than the 4 x 2000 mm2 looked at, so that "or more" alone is told of the depth only
+    # 5611 mm2, less than the 4 x 2000 mm2 looked at: "or more" alone is told of the depth only
     assert told(cures(use, variables)) == (
         "It would hold with any one of these alone, all else and the loads, self weight too, as "
         "they are: (a) 2230 mm² of bars (5-25M) or more, up to 5610 mm²; (b) a depth of 650 mm or "
