@@ -294,8 +294,8 @@ def test_ties_within_the_end_supports(count: int) -> None:
     given = detailing(beam)
     end = beam.ends[1]
     ties = (
-        StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M"),
-        StirrupZone(count, end - 200.0, end - 50.0, 3, 75.0, "10M"),
+        StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M", around_hooks=True),
+        StirrupZone(count, end - 200.0, end - 50.0, 3, 75.0, "10M", around_hooks=True),
     )
     made = schedule(beam, Detailing(given.bars, (*given.stirrups, *ties)))
     figure = elevation_figure(beam, made.detailing)
@@ -303,7 +303,32 @@ def test_ties_within_the_end_supports(count: int) -> None:
     assert_readable(figure, SOLID)
     names = [text for text in words_of(figure) if "3-10M @ 75" in text]
     assert len(names) == 2
+    assert sum("ties" in text for text in words_of(figure)) == 2
+    assert any("Ties stand around hooks; hanger stirrups are not" in t for t in words_of(figure))
     assert (made.sets[0].first, made.sets[0].last) == (-400.0, -250.0)
+
+
+def test_names_of_ties_stand_beside_the_axes() -> None:
+    """At 1 : 150 the ties' middle is 100/150 = 0.7 mm from the axis; half a name is 1.15 mm high.
+
+    So the name moves outward, clear of the axis.
+    """
+    beam = outline(LENGTHS)
+    end = beam.axes[-1]
+    ties = (
+        StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M", around_hooks=True),
+        StirrupZone(len(LENGTHS), end + 25.0, end + 175.0, 3, 75.0, "10M", around_hooks=True),
+    )
+    given = detailing(beam)
+    made = schedule(beam, Detailing(given.bars, (*given.stirrups, *ties)))
+    figure = elevation_figure(beam, made.detailing)
+    names = [
+        shape for shape in figure.shapes
+        if isinstance(shape, Text) and shape.rotation and "3-10M @ 75" in plain(shape)
+    ]  # fmt: skip
+    outward = [max(-name.at[0], name.at[0] - end) for name in names]
+    assert len(outward) == 2
+    assert min(outward) * figure.scale > 1.15 + 0.35  # half the line of the axis
 
 
 def test_words_say_what_is_drawn() -> None:

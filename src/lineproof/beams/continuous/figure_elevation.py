@@ -164,8 +164,9 @@ def _spans(seen: View, floor: float) -> list[Shape]:
 
 
 def _note_lines(seen: View, detailing: Detailing, short: Sequence[Short]) -> list[str]:
-    closed = {zone.closed for zone in detailing.stirrups if zone.span in seen.spans}
-    legs = {zone.legs for zone in detailing.stirrups if zone.span in seen.spans}
+    zones = [zone for zone in detailing.stirrups if zone.span in seen.spans]
+    closed = {zone.closed for zone in zones if not zone.around_hooks}
+    legs = {zone.legs for zone in zones}
     forms = " and ".join("closed" if each else "open" for each in sorted(closed))
     scale = f"Dimensions in mm, scale 1 : {seen.ratio:g}."
     drawn = "Bars are drawn apart; cut lengths are rounded up to full 10 mm; ends of bars"
@@ -175,6 +176,9 @@ def _note_lines(seen: View, detailing: Detailing, short: Sequence[Short]) -> lis
         lines.append(
             f"Stirrups: {forms}, {count} legs; number, size, spacing, mark, and the distance from "
             "the first to the last stirrup of a zone."
+            if not any(zone.around_hooks for zone in zones)
+            else f"Stirrups: {forms}, {count} legs: number, size, spacing, mark, first to last of "
+            "a zone. Ties stand around hooks; hanger stirrups are not drawn."
         )
     return [*lines, *gap_notes(seen, short, NOTE, PAGE_WIDTH - 3.0)]
 
@@ -217,6 +221,7 @@ def _alt(seen: View, detailing: Detailing, short: Sequence[Short]) -> str:
             parts_.append(f"{face} bars: {', '.join(runs)}")
     zones = [
         f"span {zone.span} {zone.number}-{zone.size} at {zone.spacing:.0f}"
+        + (" (ties around hooks)" if zone.around_hooks else "")
         for zone in detailing.stirrups
         if zone.span in seen.spans
     ]

@@ -14,7 +14,7 @@ from lineproof.drawing.metrics import text_width
 SIZE = 2.3
 LINE, TICK = -2.0, 0.85
 APART = 1.4
-_TIES = "ties around hooks"
+_TIES = "ties"
 FARTHEST = 6.0
 """How far a name may stand beside the middle of its zone."""
 
