@@ -275,6 +275,16 @@ def test_a_warning_is_a_failure() -> None:
         compile_pdf(source, "[]", build_date())
 
 
+def test_numbers_stay_with_their_units_places_and_verdicts(record: Record) -> None:
+    """Written with a space that does not break, in titles, notes and cells of tables."""
+    made = copy.deepcopy(record)
+    made["calc"]["title"] = "Clear span 2 of 650 mm, 12 bars"
+    pages = pypdf.PdfReader(io.BytesIO(printed(made))).pages
+    text = "".join(page.extract_text() for page in pages)
+
+    assert "Clear span\u00a02 of 650\u00a0mm, 12 bars" in text
+
+
 def test_missing_facts_leave_lines_to_fill(record: Record) -> None:
     """A record of a project that says nothing still prints, and never "None"."""
     record["project"] = {}

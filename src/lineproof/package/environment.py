@@ -19,7 +19,7 @@ from lineproof.package.layout import cut, fitted, fitted_result, whole, working_
 from lineproof.package.prose import Prose, prose_html, prose_tree
 from lineproof.package.row_heights import row_heights, table_heights
 from lineproof.resources import folder
-from lineproof.typeset.glyphs import printable
+from lineproof.typeset.glyphs import bound, printable
 from lineproof.typeset.mathml import mathml
 from lineproof.typeset.nodes import (
     Digits,
@@ -80,7 +80,7 @@ class Interned:
         if isinstance(value, str):
             known = self.texts.get(value)
             if known is None:
-                text = printable(value)
+                text = bound(printable(value))
                 self.long_words = self.long_words or _LONG_WORD.search(text) is not None
                 known = self.texts[value] = self._at(text, text)
             return known

@@ -36,6 +36,22 @@ def printable(text: str) -> str:
     return _not_printable().sub(lambda found: f"<U+{ord(found[0]):04X}>", tidy)
 
 
+_BOUND = re.compile(
+    r"(?<=\d) (?=(?:mm|m|kN|kPa|MPa|kg|h|%)(?![A-Za-z]))"  # 650 mm
+    r"|(?:(?<=\bspan)|(?<=\bspans)|(?<=\bsupport)|(?<=\bsupports)|(?<=\bline)) (?=\d)"
+    r"|(?<=\d) (?=FAILS$)"  # 1.24 FAILS
+)
+
+
+def bound(text: str) -> str:
+    """Return a text whose numbers stay on the line of their unit, their place or their verdict.
+
+    >>> bound("650 mm at support 2, 4 bars").replace("\\u00a0", "~")
+    '650~mm at support~2, 4 bars'
+    """
+    return _BOUND.sub("\u00a0", text)
+
+
 def has_missing(text: str) -> bool:
     """Tell whether :func:`printable` shows a character of the text by its code."""
     if text.isascii() and text.isprintable():
