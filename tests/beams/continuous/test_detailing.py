@@ -257,7 +257,11 @@ def test_like_bars_that_would_pass_each_other_run_through() -> None:
         bare = beam_of((5000.0, 5000.0), ("elastic",) * 3, width=width, b_w=420.0)
         bars = SectionBars((five, four), (TopBars((BarLayer(2, "25M"),)),) * 3, "15M")
         none, cases = np.zeros(2), np.zeros(len(bare.forces.cases))
-        counts = TorsionForces(np.array([0.0, 5000.0]), none, none, (cases, cases), 1.0, 1.0)
+        x = np.array([0.0, 5000.0])
+        at, nothing = np.tile(x, (len(cases), 1)), np.zeros((len(cases), 2))
+        counts = TorsionForces(
+            x, none, none, (cases, cases), 1.0, 1.0, at, (nothing, nothing)
+        )  # fmt: skip
         designed = replace(bare, bars=bars, torsion={1: counts, 2: counts})
         runs = lay_bottom(Frame.of(designed, 50))
         inner = [(run.number, run.start, run.end) for run in runs[1:]]
