@@ -44,9 +44,9 @@ _BOUND = re.compile(
 
 
 def bound(text: str) -> str:
-    """Return a text whose numbers stay on the line of their unit, their place or their verdict.
+    r"""Return a text whose numbers stay on the line of their unit, their place or their verdict.
 
-    >>> bound("650 mm at support 2, 4 bars").replace("\\u00a0", "~")
+    >>> bound("650 mm at support 2, 4 bars").replace("\u00a0", "~")
     '650~mm at support~2, 4 bars'
     """
     return _BOUND.sub("\u00a0", text)

@@ -194,11 +194,13 @@ def _torsion(calc: Calc) -> Iterator[Spot]:
 
 
 def _stirrups(calc: Calc) -> Iterator[Spot]:
+    """Give the sections with stirrups; with the restraint assumed they are those of the section."""
     return (
         Spot(_said(part), (part,))
         for part in calc.record.parts
-        if calc.has(part, "V_s", "s_max") and calc.has(part, "V_c") and not _plain(part)
-    )
+        if calc.has(part, "V_s", "s_max") and calc.has(part, "V_c")
+        and not _plain(part) and not calc.has(part, "V_fr")
+    )  # fmt: skip
 
 
 def _plain(part: Mapping[str, Any]) -> bool:

@@ -64,13 +64,14 @@ class Section:
 
     ``demand`` is a moment, positive with the bottom in tension [N.mm], or a shear [N];
     ``resistance`` a magnitude, None where the method gives none. ``words`` tell a moment that no
-    load case has.
+    load case has. ``shown`` are both as the tables print them; without, they print to three digits.
     """
 
     x: float
     demand: float
     resistance: float | None
     words: str = ""
+    shown: tuple[str, str] | None = None
 
 
 def moment_figure(
@@ -120,9 +121,10 @@ def _scaled(x: Sequence[float], y: Sequence[float], factor: float) -> list[tuple
     return [(a, factor * b) for a, b in zip(x, y, strict=True)]
 
 
-def _value(name: str, sub: str, value: float, unit: str) -> Runs:
+def _value(name: str, sub: str, value: float, unit: str, shown: str = "") -> Runs:
     sign = MINUS if value < 0.0 else ""
-    return (*symbol(name, sub), (f" = {sign}{in_unit(abs(value), unit, DIGITS)}", "roman"))
+    text = shown or in_unit(abs(value), unit, DIGITS)
+    return (*symbol(name, sub), (f" = {sign}{text}", "roman"))
 
 
 def _marks(
@@ -135,12 +137,13 @@ def _marks(
     for section in sections:
         if not low <= section.x <= high:
             continue
-        lines = [_value(name, "f", section.demand, unit)]
+        shown = section.shown or ("", "")
+        lines = [_value(name, "f", section.demand, unit, shown[0])]
         if section.resistance is None:
             lines.append((("no ", "roman"), *symbol(name, "r")))
         else:
             resistance = math.copysign(section.resistance, section.demand)
-            lines.append(_value(name, "r", resistance, unit))
+            lines.append(_value(name, "r", resistance, unit, shown[1]))
         if section.words:
             lines.append(words(section.words))
         mark = Mark(section.x, factor * section.demand, tuple(lines))
