@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
-from lineproof.beams.continuous.figure_rows import between
+from lineproof.beams.continuous.figure_rows import between, side_by_side
 from lineproof.beams.continuous.layout import StirrupZone, places_of
 from lineproof.drawing import MEDIUM, THIN, Line, Runs, Shape, Text
 from lineproof.drawing.axes import spread
@@ -15,7 +15,7 @@ SIZE = 2.3
 LINE, TICK = -2.0, 0.85
 APART = 1.4
 _TIES = "ties"
-FARTHEST = 6.0
+FARTHEST = 9.0
 """How far a name may stand beside the middle of its zone."""
 
 
@@ -91,17 +91,24 @@ def _one_line(zone: StirrupZone) -> Runs:
 def _in_one_row(
     names: Sequence[tuple[Runs, Runs]], middles: Sequence[float], axes: Sequence[float]
 ) -> list[float]:
-    """Places of the names in one row, clear of the axes; none if one would stand too far away."""
+    """Places of the names in one row, clear of the axes where that brings none too far away.
+
+    Failing that over the axes, on a white ground; none if one would still stand too far away.
+    """
     widths = [max(text_width(line, SIZE) for line in lines) for lines in names]
-    places = between(widths, middles, 0.5, PAGE_WIDTH - 0.5, axes, APART)
-    near = all(abs(a - b) <= FARTHEST for a, b in zip(places, middles, strict=False))
-    return places if near else []
+    room = (0.5, PAGE_WIDTH - 0.5)
+    for places in (
+        between(widths, middles, *room, axes, APART), side_by_side(widths, middles, *room, APART)
+    ):  # fmt: skip
+        if places and all(abs(a - b) <= FARTHEST for a, b in zip(places, middles, strict=True)):
+            return places
+    return []
 
 
 def _flat(view: View, zone: StirrupZone, middle: float, place: float, y: float) -> list[Shape]:
     first, second = _names(zone)
     return [
         Line(view.at(middle, y - 0.4), view.at(place, y - 1.7), "dimensions", THIN),
-        Text(view.at(place, y - 3.6), first, "text", SIZE),
-        Text(view.at(place, y - 6.7), second, "text", SIZE),
+        Text(view.at(place, y - 3.6), first, "text", SIZE, backing=True),
+        Text(view.at(place, y - 6.7), second, "text", SIZE, backing=True),
     ]
