@@ -357,3 +357,13 @@ def test_symbols_that_are_apart_have_words_apart(
     """On the notation page each meaning stands once."""
     words = Counter(symbol["meaning"] for symbol in edge_beam[2].data["notation"])
     assert [meaning for meaning, times in words.items() if times > 1] == []
+
+
+def test_a_reaction_that_is_not_sought_is_a_dash(
+    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+) -> None:
+    """A cell left empty would read as forgotten; the middle support has no least live load."""
+    table = edge_beam[2].entries["summary/reactions"]
+    assert all(cell for row in table["rows"] for cell in row)
+    assert "–" in table["rows"][1]
+    assert "–" not in table["rows"][0]

@@ -13,7 +13,9 @@ _SPAN = re.compile(r"l_(\d+)")
 _SPANS = re.compile(r"beam of (\w+) spans?\b")
 _SHAPE = re.compile(r"\b(T|L|rectangular) section")
 _SUPPORT = re.compile(r"(\d+): an? ([a-z ]+?)(?:, [^,;]*? wide)?, ([a-z ]+?)(?:; |\.)")
-_SIMPLE, _FREE_END = "holds it up and lets it turn", "free end"
+_SIMPLE = ("holds it vertically and leaves it free to rotate", "holds it up and lets it turn")
+"""How a record tells a support that is free to rotate; the second is that of older ones."""
+_FREE_END = "free end"
 SIDES = ("left", "right")
 
 
@@ -123,6 +125,6 @@ def _is_span(entry: Mapping[str, Any]) -> bool:
 def _supports(record: Record) -> tuple[Support, ...]:
     text = str(record.entries.get("given/supports", {}).get("text", ""))
     return tuple(
-        Support(int(number), carrier, hold == _SIMPLE)
+        Support(int(number), carrier, hold in _SIMPLE)
         for number, carrier, hold in _SUPPORT.findall(text)
     )

@@ -304,7 +304,7 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     if inputs.shape == "L" and not inputs.torques and inputs.forces_file is None:
         rows.append({"check": "Torsion from the slab: no torque is given", "clause": "11.3.10"})
     if any(support.carrier == "girder" for support in inputs.supports):
-        rows.append({"check": "Girders turned by the end moments", "clause": "11.3.10"})
+        rows.append({"check": "Torsion of the girders by the end moments", "clause": "11.3.10"})
     if not inputs.slab:
         rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
     return [*rows, *_loads_not_here(inputs)]

@@ -17,7 +17,7 @@ from lineproof.standards.nbc import loads, reduction
 
 _CARRIERS = {"column": "a column", "girder": "a girder", "wall": "a wall", "none": "a free end"}
 _HOLDS = {
-    "simple": "holds it up and lets it turn",
+    "simple": "holds it vertically and leaves it free to rotate",
     "fixed": "holds it against turning",
     "elastic": "holds it with the stiffness of its columns",
     "free": "does not hold it",

@@ -11,7 +11,7 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3 import shear_bars, torsion
 
 TORSION = [
-    "Place", "Load case", "T_f, kN.m", "Counts from, kN.m", "Design, kN.m", "a_v, mm2/m",
+    "Place", "Load case", "T_f, kN.m", "Threshold, kN.m", "Design, kN.m", "a_v, mm2/m",
     "a_t, mm2/m", "Legs, mm2/m", "Stirrups", "Section", "Bars",
 ]  # fmt: skip
 TORSION_WIDTHS = (27.0, 28.0, 12.0, 15.0, 13.0, 13.0, 13.0, 13.0, 13.0, 13.0, 13.0)

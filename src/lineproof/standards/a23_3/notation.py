@@ -199,8 +199,8 @@ _ROWS = (
     ("a_t", "a", "t", "", "area per length of one leg that torsion requires", "mm2/mm"),
     ("a_v", "a", "v", "", "area per length of all legs that shear requires", "mm2/mm"),
     ("a_vt", "a", "vt", "", "area per length of all legs, shear and torsion", "mm2/mm"),
-    ("V_fe", "V", "fe", "", "shear that stands for shear and torsion in the strain", "kN"),
-    ("V_le", "V", "ℓe", "", "shear that stands for shear and torsion in the bars", "kN"),
+    ("V_fe", "V", "fe", "", "equivalent shear of shear and torsion, for the strain", "kN"),
+    ("V_le", "V", "ℓe", "", "equivalent shear of shear and torsion, for the bars", "kN"),
     # interface shear and bearing
     ("c_v", "c", "v", "", "cohesion of the shear plane", "MPa"),
     ("mu", "μ", "", "", "friction factor of the shear plane", ""),

@@ -175,7 +175,7 @@ SECTION = _criterion(
 SHEAR_IN_STRAIN = _formula(
     "V_fe = sqrt(V_f**2 + (0.9*p_h*T_f/(2*A_o))**2)",
     clause="11.3.10.5",
-    title="Shear that stands for shear and torsion in the strain",
+    title="Equivalent shear of shear and torsion, for the strain",
     basis=FROM_MEMORY,
 )
 EPS_X = _formula(
@@ -193,7 +193,7 @@ LEAST_BARS = _formula(
 SHEAR_IN_BARS = _formula(
     "V_le = sqrt((V_f - 0.5*min(V_s, V_f))**2 + (0.45*p_h*T_f/(2*A_o))**2)",
     clause="11.3.10.6",
-    title="Shear that stands for shear and torsion in the bars",
+    title="Equivalent shear of shear and torsion, for the bars",
     basis=FROM_MEMORY,
 )
 TENSION_SIDE = _formula(
