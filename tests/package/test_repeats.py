@@ -126,7 +126,7 @@ def test_pdf_tells_what_a_repeated_line_is() -> None:
     assert "repeats the line of that number" in text
     for label in ("as 2.1", "as 2.2", "as 2.3"):
         assert label in text
-    assert len(re.findall("holds, ratio 0.675", text)) == 2
+    assert len(re.findall("holds, ratio 0.68", text)) == 2
 
 
 def test_working_without_repeated_lines_does_not_explain_them() -> None:

@@ -41,8 +41,8 @@ LONGEST = 400
 # Printed units in N, mm and MPa, written here apart from the package's own list.
 IN_N_MM = {
     "": 1.0, "mm": 1.0, "m": 1e3, "mm2": 1.0, "mm4": 1.0, "MPa": 1.0, "N/mm": 1.0, "kPa": 1e-3,
-    "kN": 1e3, "kN/m": 1.0, "kN/m3": 1e-6, "kN.m": 1e6, "kg/m3": 1.0, "deg": 1.0, "mm2/mm": 1.0,
-    "m2": 1e6,
+    "kN": 1e3, "kN/m": 1.0, "kN/m3": 1e-6, "kN.m": 1e6, "kN.m/m": 1e3, "kg/m3": 1.0, "deg": 1.0,
+    "mm2/mm": 1.0, "m2": 1e6,
 }  # fmt: skip
 
 

@@ -190,9 +190,11 @@ def _no_stirrups(view: View) -> Iterator[Caught]:
 
 
 def _strain_bars(view: View) -> Iterator[Caught]:
+    # With the restraint assumed the top is in tension, whatever is in the case of the section.
+    restrained = {node.part for node in view.lines("V_fr")}
     for node in view.lines("eps_x"):
         bars = view.target(node, "A_s")
-        if bars is None:
+        if bars is None or node.part in restrained:
             continue
         if bars.symbol == "A_sp" or "A_sp" in names(bars):
             yield Caught(

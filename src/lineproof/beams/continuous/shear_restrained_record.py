@@ -23,6 +23,11 @@ _RESTRAINT = (
     "the largest."
 )
 
+_NO_RESISTANCE = (
+    "The section has no resistance in its own load case, and that check fails: with the restraint "
+    "nothing more is checked."
+)
+
 
 def record_restrained(
     model: Model, basis: ShearBasis, section: ShearSection, more: Mapping[str, Entry]
@@ -49,6 +54,9 @@ def record_restrained(
         if "T_fr" in own:
             steps.bind(T_f=own["T_fr"])
         steps.line(shear.D_V)
+        if not {"s", "V_s"} & own.keys():
+            sheet.note("no-resistance", _NO_RESISTANCE, title="Resistance")
+            return
         turned = replace(section, A_s=section.A_sp) if below else section
         if record_method(steps, basis, turned):
             _record_strength(steps, section, own)
