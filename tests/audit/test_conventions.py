@@ -155,3 +155,21 @@ def test_one_symbol_turned_beside_others_in_our_sign_is_no_convention() -> None:
 
     assert audit.notes == ()
     assert audit.findings
+
+
+def test_signs_that_a_line_below_carries_on_are_no_convention() -> None:
+    """40 x 6^2/8 = 180 and 20 x 6^2/8 = 90 kN.m, both claimed negative.
+
+    F_1 = M_1/d = 180/0.5 = 360 kN: -360 is worked of the wrong sign, 360 of another convention.
+    """
+    graph = Graph(
+        sheet_of(
+            {"M_1 = w_1*l**2/8": "kN.m", "M_2 = w_2*l**2/8": "kN.m", "F_1 = M_1/d": "kN"},
+            {"w_1": "40 kN/m", "w_2": "20 kN/m", "l": "6 m", "d": "500 mm"},
+        ).close()
+    )
+    moments = [typed(graph, "beam/M_1", "-180"), typed(graph, "beam/M_2", "-90")]
+
+    assert convention_of(graph, moments).ids == {"beam/M_1", "beam/M_2"}
+    assert convention_of(graph, [*moments, typed(graph, "beam/F_1", "360")]).ids
+    assert not convention_of(graph, [*moments, typed(graph, "beam/F_1", "-360")]).ids

@@ -7,11 +7,11 @@ one of opposite sign among others is a slip.
 
 from __future__ import annotations
 
-from collections.abc import Container, Hashable, Sequence
+from collections.abc import Container, Hashable, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from lineproof.audit.data import Claim
-from lineproof.audit.graph import Graph, Node
+from lineproof.audit.graph import Graph, Node, Number
 from lineproof.audit.slips.scope import stem
 from lineproof.quantity.units import UNITS
 
@@ -19,6 +19,8 @@ LEAST = 2
 """One moment alone says nothing of a convention."""
 MOSTLY = 0.5
 """A symbol counts as negative in the calc if more than so much of its values are."""
+NEARLY = 0.01
+"""Relative difference within which a line follows: claims of three digits carry half of it."""
 _MOMENT = "N.mm"
 _MOST_NAMED = 4
 
@@ -37,7 +39,8 @@ def convention_of(graph: Graph, claims: Sequence[Claim]) -> Convention:
     Moments of all symbols that the calc counts as negative are one kind: a few of them may be
     positive under pattern loads. Of a symbol that is positive in the calc, hogging and sagging
     moments are kinds of their own, told apart by the sort of part. A moment that stands in
-    several parts is one moment.
+    several parts is one moment. Where a claimed line is worked of such a moment as it is written,
+    minus and all, the signs are no convention.
     """
     negative = _negative(graph)
     groups: dict[Hashable, list[Claim]] = {}
@@ -49,9 +52,34 @@ def convention_of(graph: Graph, claims: Sequence[Claim]) -> Convention:
         for group in groups.values()
         if len({_moment_of(graph[claim.id]) for claim in group}) >= LEAST
         and all(_is_opposite(graph, claim) for claim in group)
+        and not _worked_as_written(graph, claims, group)
         for claim in group
     ]
     return _told(graph, found)
+
+
+def _worked_as_written(graph: Graph, claims: Sequence[Claim], group: Sequence[Claim]) -> bool:
+    """Tell whether a claimed line follows from moments of a group with their signs, not turned."""
+    known = {claim.id: claim for claim in claims}
+    written = graph.stored | {claim.id: claim.value for claim in claims}
+    turned = written | {claim.id: -claim.value for claim in group}
+    own = {claim.id for claim in group}
+    below = ({user for i in own for user in graph.users[i]} & known.keys()) - own
+    return any(
+        _follows(graph, known[user], written) and not _follows(graph, known[user], turned)
+        for user in below
+        if graph[user].tree is not None
+    )
+
+
+def _follows(graph: Graph, claim: Claim, values: Mapping[str, Number]) -> bool:
+    """Tell whether a claim is, nearly, what its formula gives of these values."""
+    node = graph[claim.id]
+    try:
+        found = node.compute(graph.named(node, values))
+    except (ArithmeticError, ValueError):
+        return False
+    return abs(found - claim.value) <= NEARLY * abs(claim.value)
 
 
 def in_our_signs(claims: Sequence[Claim], convention: Convention) -> list[Claim]:
