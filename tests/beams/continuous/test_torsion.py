@@ -295,7 +295,7 @@ def test_forces_in_the_bars_by_torsion() -> None:
     assert top.max() > 0
 
 
-@settings(max_examples=6, deadline=None, derandomize=True, database=None,
+@settings(max_examples=4, deadline=None, derandomize=True, database=None,
           suppress_health_check=list(HealthCheck))  # fmt: skip
 @given(torque=st.floats(500, 14e3), compatibility=st.booleans(),
        method=st.sampled_from(["general", "simplified"]))  # fmt: skip
