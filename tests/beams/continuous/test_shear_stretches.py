@@ -11,7 +11,7 @@ from lineproof.beams.continuous.bars_counted import record_area
 from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import stand
-from lineproof.beams.continuous.shear_stretches import bars_over, span_numbers
+from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over, span_numbers
 from lineproof.beams.steps import Steps
 from lineproof.sheet import Sheet
 
@@ -43,11 +43,8 @@ def test_lapped_bars_count_as_one_all_along(more: float) -> None:
     ]
 
 
-def test_bars_lapped_too_little_count_as_far_as_each_is_developed() -> None:
-    """2-25M over 300 of 996.7 mm: at the begin of the lap 300/996.7 = 0.30 of the first.
-
-    249.2 mm, a quarter, from either end: 50.8/996.7 = 0.05 of each, together 100 mm2 of 1000.
-    """
+def over_a_short_lap() -> tuple[BarsOver, ...]:
+    """What counts of 2-25M lapped over 300 mm, from 3.0 to 3.3 m of a span of 7 m."""
     four = (BarLayer(4, "25M"),)
     bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
     designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
@@ -55,7 +52,15 @@ def test_bars_lapped_too_little_count_as_far_as_each_is_developed() -> None:
         BarRun("bottom", 1, 2, "25M", -150.0, 3300.0),
         BarRun("bottom", 1, 2, "25M", 3000.0, 7150.0),
     ]
-    found = bars_over(designed, stand(designed, runs), "bottom", 1)
+    return bars_over(designed, stand(designed, runs), "bottom", 1)
+
+
+def test_bars_lapped_too_little_count_as_far_as_each_is_developed() -> None:
+    """2-25M over 300 of 996.7 mm: at the begin of the lap 300/996.7 = 0.30 of the first.
+
+    249.2 mm, a quarter, from either end: 50.8/996.7 = 0.05 of each, together 100 mm2 of 1000.
+    """
+    found = over_a_short_lap()
     quarter = 1.3 * 0.45 * 400 / 35**0.5 * 25.2 / 4
     areas = {(round(over.start), round(over.end)): over.area for over in found}
     assert areas[round(3300 - 2 * quarter), 3000] == pytest.approx(300.0)
@@ -64,14 +69,7 @@ def test_bars_lapped_too_little_count_as_far_as_each_is_developed() -> None:
 
 def test_the_place_where_bars_of_a_stretch_are_the_least_is_said() -> None:
     """From 3.051 to 3.249 m each bar reaches 3300 - 3249.2 = 50.8 mm at least: 0.05 of 996.7 mm."""
-    four = (BarLayer(4, "25M"),)
-    bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
-    designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
-    runs = [
-        BarRun("bottom", 1, 2, "25M", -150.0, 3300.0),
-        BarRun("bottom", 1, 2, "25M", 3000.0, 7150.0),
-    ]
-    found = bars_over(designed, stand(designed, runs), "bottom", 1)
+    found = over_a_short_lap()
     (over,) = [each for each in found if round(each.start) == 3051]
     sheet = Sheet("B1", "Bars")
     with sheet.part("bars", "Bars"):
