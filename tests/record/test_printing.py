@@ -10,6 +10,7 @@ from typing import Any
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
+from tests.beams.pocket import faults
 
 from lineproof.quantity import factor
 from lineproof.record import Record, recompute
@@ -331,3 +332,23 @@ def test_a_long_result_has_the_same_digits_wherever_it_is_used() -> None:
     entries = sheet.close().entries
     assert entries["p/T"]["printed"]["result"] == "12340"
     assert entries["p/U"]["printed"]["args"]["T"] == "12.34e6"  # in N
+
+
+def test_a_result_half_way_is_rounded_as_it_is_printed() -> None:
+    """11.8584 - 19.764 x 0.2 + 16.47 x 0.2**2/2 = 8.235 exactly: 8.24, though a float lies below.
+
+    With 11.86, 19.8 and 16.5 a calculator gives 8.23: one digit more gives 8.235.
+    """
+    sheet = Sheet("B1")
+    with sheet.part("p", "P"):
+        for name, typed in (("M_0", "-11.8584 kN.m"), ("V_0", "19.764 kN"),
+                            ("w_0", "16.47 kN/m"), ("x", "0.2 m")):  # fmt: skip
+            sheet.given(name, typed)
+        sheet.line("M = 1*M_0", unit="kN.m")  # computed, hence rounded for print
+        sheet.line("V = 1*V_0", unit="kN")
+        sheet.line("w = 1*w_0", unit="kN/m")
+        sheet.line("M_f = -(M + V*x - w*x**2/2)", unit="kN.m", system="kN-m")
+    record = sheet.close()
+    assert list(faults(record.data)) == []
+    printed = record.entries["p/M_f"]["printed"]
+    assert Decimal(printed["result"]) in (Decimal("8.24"), Decimal("8.235"))

@@ -8,7 +8,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Sequence
 from decimal import ROUND_HALF_UP, Context, Decimal
-from functools import cache, lru_cache
+from functools import cache, lru_cache, partial
 from typing import NamedTuple
 
 from lineproof.quantity.quick_digits import (
@@ -163,6 +163,7 @@ def choose_digits(
     needed: int = 0,
     decimals: int | None = None,
     wanted: int = 0,
+    rounded: Callable[[int], float] | None = None,
 ) -> Chosen:
     """Choose the fewest digits so that the printed arguments give the printed result.
 
@@ -174,10 +175,12 @@ def choose_digits(
     show ``needed`` digits, do arguments go beyond six.
     ``decimals`` asks for a result to so many decimals instead of significant digits;
     ``wanted`` asks for more digits than the start, for which arguments go to eight.
+    ``rounded`` gives the result as it is printed to so many digits, where the float in ``unit``
+    is not the very value that is printed: 8235000.0 N.mm lie half way, 8.235 below it.
     """
     start = max(start_digits(result, unit), needed)
     first = max(start, min(wanted, MOST_WANTED))
-    substituted = _Substituted(function, args, result)
+    substituted = _Substituted(function, args, result, rounded or partial(rounded_value, result))
     plain = decimals is None or bool(needed)
     if plain and substituted.gives(first):
         return Chosen(tuple(substituted.digits), first)
@@ -196,10 +199,15 @@ class _Substituted:
     """A function of printed arguments, beside the result that it should give."""
 
     def __init__(
-        self, function: Callable[..., float], args: Sequence[Argument], result: float
+        self,
+        function: Callable[..., float],
+        args: Sequence[Argument],
+        result: float,
+        rounded: Callable[[int], float],
     ) -> None:
         self.digits = [a.digits for a in args]
-        self._function, self._args, self._result = function, args, result
+        self._function, self._args = function, args
+        self._result, self._rounded = result, rounded
         self._printed = [
             rounded_value(a.value, a.digits) if a.exact is None else a.exact for a in args
         ]
@@ -207,7 +215,7 @@ class _Substituted:
 
     def gives(self, digits: int) -> bool:
         """Tell whether it rounds to the result printed to so many digits."""
-        missed = abs(_call(self._function, self._printed) - rounded_value(self._result, digits))
+        missed = abs(_call(self._function, self._printed) - self._rounded(digits))
         return missed <= last_unit(self._result, digits) / 2 * (1 + 1e-9)
 
     def lengthened(self, digits: int, limit: int) -> bool:

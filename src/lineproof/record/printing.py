@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from decimal import Decimal
 from typing import Any
 
@@ -255,6 +255,7 @@ class Printer:
             lambda *numbers: compiled(*numbers) / scale,
             arguments, value / scale, test.unit, max(needed, 0),
             decimals=_residual_decimals(value / scale, other / scale),
+            rounded=_rounding(value, test.unit),
         )  # fmt: skip
 
     def _line(self, entry: Entry) -> tuple[dict[str, Any], Sequence[int]]:
@@ -333,8 +334,13 @@ def _choose(
     scale = internal_factor(unit)
     return choose_digits(
         lambda *numbers: made.function(*numbers) / scale,
-        arguments, value / scale, unit, wanted=wanted,
+        arguments, value / scale, unit, wanted=wanted, rounded=_rounding(value, unit),
     )  # fmt: skip
+
+
+def _rounding(value: float, unit: str) -> Callable[[int], float]:
+    """Return what gives an internal value as it is printed in a unit to so many digits."""
+    return lambda digits: float(in_unit(value, unit, digits))
 
 
 def _longer(arguments: Sequence[Argument], chosen: Chosen) -> list[Argument]:
