@@ -186,6 +186,8 @@ CUTOFF = (
     W("cutoff.PAST_INWARD", {"x_t": 1900, "x_e": 1200}, "1900 - 1200 = 700.0"),
     W("cutoff.PAST_OUTWARD", {"x_t": 1100, "x_e": 1800}, "1800 - 1100 = 700.0"),
     W("cutoff.CONTINUING_INWARD", {"x_t": 1900, "x_co": 150}, "1900 - 150 = 1750.0"),
+    W("cutoff.PAST_SUPPORT", {"x_t": 1100, "x_e": 500}, "500 + 1100 = 1600.0"),
+    W("cutoff.CONTINUING_PAST_SUPPORT", {"x_t": 1100, "x_co": 1550}, "1550 + 1100 = 2650.0"),
     W("cutoff.CONTINUING_OUTWARD", {"x_t": 1100, "x_co": 2500}, "2500 - 1100 = 1400.0"),
     # 150 mm past a face that lies 200 mm from the axis
     W("cutoff.IN_SUPPORT", {"b_sp": 400, "x_e": 50}, "400/2 - 50 = 150.0"),

@@ -12,7 +12,7 @@ from hypothesis import HealthCheck, Phase, given, settings
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.cutoff import Frame, zone_at
 from lineproof.beams.continuous.cutoff_ends import bottom_side, passes, top_side
-from lineproof.beams.continuous.cutoff_record import point_of
+from lineproof.beams.continuous.cutoff_need import need_of
 from lineproof.beams.continuous.detailing import hook_ties, lay_bars
 from lineproof.beams.continuous.detailing_bottom import lay_bottom
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars, TorsionForces
@@ -114,11 +114,11 @@ def test_rules_of_ends_hold(designed: Designed) -> None:
             assert outline.supports[support - 1].half - side.t_kept >= 150
             for index, ending in enumerate(side.cuts):
                 assert zone_at(designed, "bottom", k, near, ending.t, side.continuing(index))
-                point = point_of(frame, side, index)
-                assert point is not None
+                need = need_of(frame, side, index)
+                assert need is not None
                 d = outline.depths[k - 1] - 51.3 - 12.6
-                assert point.t - ending.t >= 12 * DIAMETERS[ending.runs[0].size]
-                assert point.t - ending.t >= 0.9 * d
+                assert need.point.t - ending.t >= 12 * DIAMETERS[ending.runs[0].size]
+                assert need.point.t - ending.t >= 0.9 * d
     for j in range(1, len(outline.supports) + 1):
         for towards in ("left", "right"):
             if not designed.bars.top[j - 1].web or not designed.forces.has_span(j, towards):

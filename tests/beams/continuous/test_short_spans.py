@@ -125,3 +125,30 @@ def test_bars_of_two_supports_that_meet(designed: Designed) -> None:
         (3, 6000.0, 13000.0, "support 2, support 3"),
         (3, 16000.0, 19000.0, "support 4"),
     ]
+
+
+def test_bars_past_a_support_are_for_the_span_behind() -> None:
+    """Top bars of the support behind end in a cantilever: what they need counts from that span.
+
+    By hand, spans 1.6 m (free end), 4 and 9.9 m, dead load 22.0152 kN/m, live load 14.88 kN/m on
+    spans 1 and 3 (three-moment equation, M_2 of statics, the other end free to turn):
+    M_2D = -22.0152*1.6**2/2 = -28.18, M_2L = -14.88*1.6**2/2 = -19.05 kN.m,
+    M_3D = (4*28.18 - 22.0152*(4**3 + 9.9**3)/4)/27.8 = -200.71, M_3L1 = 4*19.05/27.8 = 2.74,
+    M_3L3 = -14.88*9.9**3/4/27.8 = -129.84. Factored: M_2 = -63.79, M_3 = -441.54 kN.m,
+    V = 27.52*4/2 - (441.54 - 63.79)/4 = -39.40 kN in span 2.
+    4-15M go on: a = 0.85*800*400/(0.802*0.65*32*380) = 42.91, d = 800 - 30 - 11.3 - 8 = 750.7 mm,
+    M_r = 272 kN*(750.7 - 21.5) = 198.4 kN.m. 63.79 + 39.40 x + 13.76 x**2 = 198.4 at x = 2.008 m.
+    """
+    spans = ["1.6 m", "4 m", "9.9 m"]
+    supports = ["free", "column 400 mm", "column 400 mm", "column 400 mm"]
+    record = flow.run(flow.start(spans=spans, supports=supports, h="800 mm")).close()
+    part = "anchorage-top-2-left-cut-1"
+    values = {key: record.entries[f"{part}/{key}"]["value"] for key in ("x_t", "M_f", "M_r")}
+    assert values["x_t"] in (2007.0, 2008.0)
+    assert values["M_r"] == pytest.approx(198.4, rel=1e-3)
+    assert values["M_f"] == pytest.approx(198.4, rel=1e-3)
+    # They end 500 mm past the axis of support 2, so 2507 mm or more past the point.
+    x_e = record.entries[f"{part}/x_e"]["value"]
+    assert record.entries[f"{part}/l_ext"]["value"] == x_e + values["x_t"]
+    assert record.failed == []
+    assert recompute(record) == []

@@ -197,6 +197,27 @@ def _last_needed(needed: Whole, half: int) -> int | None:
     return int(needed[breaks[0]] if len(breaks) else needed[-1])
 
 
+def first_need(frame: Frame, span: int, near: End, M_r: float) -> Point | None:
+    """Return up to where from a support on bars of resistance M_r do alone at the top, on whole mm.
+
+    None where they do not even at the near face, and where they do all along.
+    """
+    designed = frame.designed
+    demand = frame.demands[span - 1]
+    t = local(designed, span, near, demand.local)
+    order = np.argsort(t)
+    t, M = t[order], demand.side("top").M[order]
+    needed = np.flatnonzero(max(M_r, NOTHING) < M)
+    if not len(needed) or needed[0] == 0:
+        return None
+    first = int(needed[0])
+    start = t[first - 1]
+    there = np.clip(np.arange(math.floor(start), math.ceil(t[first]) + 1.0), start, t[first])
+    cases = moments(designed, "top", span, near, there)
+    index = max(int(np.argmax(cases.max(axis=0) > max(M_r, NOTHING))) - 1, 0)
+    return Point(float(there[index]), int(cases[:, index].argmax()))
+
+
 def far_face(designed: Designed, span: int, near: End) -> float:
     """Return the distance of the far face from the near axis."""
     far = designed.outline.supports[span if near == "left" else span - 1].half

@@ -5,6 +5,7 @@ from __future__ import annotations
 from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.cutoff import Point, no_further_need
 from lineproof.beams.continuous.cutoff_ends import Ending, Runs, passes
+from lineproof.beams.continuous.cutoff_need import Need
 from lineproof.beams.continuous.cutoff_record import Site, ends_before, record_extension, thickest
 from lineproof.beams.continuous.cutoff_sets import grouped, record_area, text_of
 from lineproof.beams.continuous.numbers import holds
@@ -97,7 +98,8 @@ def _record_extension(site: Site, point: Point) -> None:
     side = site.side
     steps = Steps(site.writers.sheet, site.section)
     steps.bind(x_t=site.given("x_t", point.t, _source(site, point)))
-    past = record_extension(site, steps, point.t, side.t_kept, side.kept)
+    need = Need(side.span, side.near, point, behind=False)
+    past = record_extension(site, steps, need, side.t_kept, side.kept)
     _record_length(past)
 
 

@@ -9,16 +9,15 @@ from lineproof.beams.continuous.anchorage import bar_of, development_length
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
 from lineproof.beams.continuous.cutoff import (
     Frame,
-    Point,
     along,
     extension_formula,
-    full_moment,
     local,
-    no_further_need,
     shear_in_tension,
+    support_of,
     zone_at,
 )
 from lineproof.beams.continuous.cutoff_ends import Runs, SideOf
+from lineproof.beams.continuous.cutoff_need import Need, need_of
 from lineproof.beams.continuous.cutoff_sets import (
     begin,
     grouped,
@@ -31,13 +30,20 @@ from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance_demand import stretch_at
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps, only
-from lineproof.formula import COMMON_PRACTICE, Criterion
+from lineproof.formula import COMMON_PRACTICE, Criterion, Formula
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
+from lineproof.standards.references import MECHANICS
 
 _NONE = (
     "No bars go on: the bars may end only where no load case brings tension to the {face}, and "
     "past it."
+)
+_PAST = (clause.PAST_INWARD, clause.PAST_OUTWARD, clause.PAST_SUPPORT)
+_CONTINUING = (
+    clause.CONTINUING_INWARD,
+    clause.CONTINUING_OUTWARD,
+    clause.CONTINUING_PAST_SUPPORT,
 )
 _NO_SHIFT = (
     "Torsion counts in this span: no longer bars stand for what shear adds; the tension by moment, "
@@ -106,24 +112,18 @@ def record_cuts(site: Site) -> None:
         _record_cut(site, index)
 
 
-def point_of(frame: Frame, side: SideOf, index: int) -> Point | None:
-    """Return the point of no further need of a cut, by the bars that go on past it."""
-    M_r = full_moment(frame.designed, side.face, side.span, side.continuing(index))
-    return no_further_need(frame, side.face, side.span, side.near, M_r)
-
-
 def _record_cut(site: Site, index: int) -> None:
     side, sheet = site.side, site.writers.sheet
     ending, continuing = side.cuts[index], side.continuing(index)
     key = cut_key(site.key, index)
-    point = point_of(site.frame, side, index)
+    need = need_of(site.frame, side, index)
     zone = zone_at(site.writers.designed, side.face, side.span, side.near, ending.t, continuing)
     going = f"{text_of(continuing)} going on" if continuing else "none going on"
     with sheet.part(key, f"{site.title}: {text_of(ending.runs)} cut, {going}"):
-        if point is None:
+        if need is None:
             _note_no_point(site)
         else:
-            _record_point(site, index, point)
+            _record_point(site, index, need)
         if zone == "compression":
             _note_compression(site, ending.t)
     if zone == "double area":
@@ -132,10 +132,12 @@ def _record_cut(site: Site, index: int) -> None:
         _record_low_shear(site, key, ending.t)
 
 
-def _record_point(site: Site, index: int, point: Point) -> None:
-    side, sheet = site.side, site.writers.sheet
+def _record_point(site: Site, index: int, need: Need) -> None:
+    side, sheet, designed = site.side, site.writers.sheet, site.writers.designed
     ending, continuing = side.cuts[index], side.continuing(index)
-    steps = begin(site.writers, sheet, side.span, side.face)
+    if need.behind:
+        _note_behind(site, need)
+    steps = begin(site.writers, sheet, need.span, side.face)
     if continuing:
         record_area(steps, grouped(site.writers, continuing), "A_co")
         record_resistance(steps, site.writers, side.face)
@@ -143,26 +145,27 @@ def _record_point(site: Site, index: int, point: Point) -> None:
     else:
         sheet.note("none-going-on", _NONE.format(face=side.face), title="Bars that go on")
         source = "found along the envelope"
-    steps.bind(x_t=site.given("x_t", point.t, source))
-    site.writers.forces(steps, site.demand(point.t, point.row), side.near, steps.entry("x_t"))
+    steps.bind(x_t=site.given("x_t", need.point.t, source))
+    x = local(designed, need.span, need.near, need.point.t)
+    demand = designed.forces.demand(need.span, x, need.near, need.point.row)
+    site.writers.forces(steps, demand, need.near, steps.entry("x_t"))
     if continuing:
         steps.check(clause.SUFFICES)
-    record_extension(site, steps, point.t, ending.t, ending.runs)
-    _record_continuing(site, steps, index)
+    record_extension(site, steps, need, ending.t, ending.runs)
+    _record_continuing(site, steps, index, need)
 
 
-def record_extension(site: Site, steps: Steps, t_point: float, t: float, runs: Runs) -> Steps:
+def record_extension(site: Site, steps: Steps, need: Need, t: float, runs: Runs) -> Steps:
     """Record the extension past a point and its check; by d and d_v of the whole section."""
-    designed, side = site.writers.designed, site.side
-    formula = extension_formula(designed, side.span)
+    formula = extension_formula(site.writers.designed, need.span)
     if "theta" in formula.names:
-        _record_angle(site, steps, along(designed, side.span, side.near, t_point))
+        _record_angle(site, steps, need.place(site.frame))
     else:
         site.writers.sheet.note("no-shift", _NO_SHIFT, title="Shear", clause="11.3.9.2")
     past = Steps(site.writers.sheet, steps.place | site.section)
     past.bind(x_e=site.given("x_e", t), d_b=site.bar(thickest(runs))["d_b"])
     past.line(formula)
-    past.line(clause.PAST_INWARD if side.face == "bottom" else clause.PAST_OUTWARD)
+    past.line(_of_need(site, need, _PAST))
     past.check(clause.EXTENDED, title=ends_before(clause.EXTENDED, past.entry("l_ext")))
     return past
 
@@ -185,7 +188,28 @@ def _record_angle(site: Site, steps: Steps, place: float) -> None:
         steps.bind(theta=angle)
 
 
-def _record_continuing(site: Site, steps: Steps, index: int) -> None:
+def _of_need(site: Site, need: Need, formulas: tuple[Formula, Formula, Formula]) -> Formula:
+    """Return the formula of a length: of bottom bars, of top bars, and from the span behind."""
+    inward, outward, behind = formulas
+    if need.behind:
+        return behind
+    return inward if site.side.face == "bottom" else outward
+
+
+def _note_behind(site: Site, need: Need) -> None:
+    side = site.side
+    site.writers.sheet.note(
+        "behind",
+        f"In span {side.span} the bars that go on carry the moment alone. Those that end are for "
+        f"span {need.span}: the point up to which they are needed is sought there; x_t is its "
+        f"distance from the axis of support {support_of(side.span, side.near)}.",
+        title="Point of no further need",
+        clause="12.10.3",
+        basis=MECHANICS,
+    )
+
+
+def _record_continuing(site: Site, steps: Steps, index: int, need: Need) -> None:
     """Record the length that the continuing bars need past the point (12.10.4)."""
     side = site.side
     if not side.continuing(index):
@@ -195,8 +219,7 @@ def _record_continuing(site: Site, steps: Steps, index: int) -> None:
     past.bind(**only(longest, ("d_b", "l_d")))
     past.bind(x_co=site.given("x_co", side.t_continuing(index)))
     past.line(clause.CONTINUING)
-    inward = side.face == "bottom"
-    past.line(clause.CONTINUING_INWARD if inward else clause.CONTINUING_OUTWARD)
+    past.line(_of_need(site, need, _CONTINUING))
     past.check(clause.CONTINUES)
 
 

@@ -55,6 +55,12 @@ PAST_OUTWARD = _formula(
     title="Extension of the bars away from the support",
     basis=MECHANICS,
 )
+PAST_SUPPORT = _formula(
+    "l_ext = x_e + x_t",
+    clause="geometry",
+    title="Extension of the bars, past the support from the span behind it",
+    basis=MECHANICS,
+)
 CONTINUING_INWARD = _formula(
     "l_cn = x_t - x_co",
     clause="geometry",
@@ -65,6 +71,12 @@ CONTINUING_OUTWARD = _formula(
     "l_cn = x_co - x_t",
     clause="geometry",
     title="Length of the continuing bars away from the support",
+    basis=MECHANICS,
+)
+CONTINUING_PAST_SUPPORT = _formula(
+    "l_cn = x_co + x_t",
+    clause="geometry",
+    title="Length of the continuing bars, past the support from the span behind it",
     basis=MECHANICS,
 )
 EXTENDED = _criterion(
@@ -247,8 +259,9 @@ PAST_FACE = _formula(
 
 FORMULAS = (
     TENSION, TENSION_OTHER_SIDE, EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD,
-    PAST_OUTWARD, CONTINUING_INWARD, CONTINUING_OUTWARD, IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION,
-    PAST_FACE, LIMIT, LIMIT_CONFINED, LENGTH_PAST_INFLECTION,
+    PAST_OUTWARD, PAST_SUPPORT, CONTINUING_INWARD, CONTINUING_OUTWARD, CONTINUING_PAST_SUPPORT,
+    IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION, PAST_FACE, LIMIT, LIMIT_CONFINED,
+    LENGTH_PAST_INFLECTION,
 )  # fmt: skip
 CRITERIA = (
     EXTENDED, CONTINUES, SUFFICES, CUT_AT_LOW_SHEAR, CUT_AT_DOUBLE_AREA, CUT_AT_MODERATE_SHEAR,
