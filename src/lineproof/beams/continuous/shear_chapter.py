@@ -39,6 +39,7 @@ from lineproof.beams.continuous.shear_restrained_record import record_restrained
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over, depth_over
 from lineproof.beams.continuous.stirrups_record import record_stirrups
+from lineproof.beams.continuous.support_turning import record_support_torques
 from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.continuous.torsion_inputs import corner_bar
 from lineproof.beams.continuous.torsion_record import record_span_torsion
@@ -88,6 +89,7 @@ def record_shear(design: Design) -> None:
             text = f"{MORE_BARS.format('; '.join(design.raised))} {AT_GIRDER}"
             sheet.note("more-bars", text, title="Bars along the beam", clause="11.3.9")
     torsion = _record_torsion(design, alike)
+    record_support_torques(model, next(iter(torsion.values()), {}))
     for row in choice.sections:
         for section in row:
             more = alike | torsion.get(section.span, {})

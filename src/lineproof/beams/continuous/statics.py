@@ -14,6 +14,7 @@ from lineproof.beams.continuous.loads import kind_text
 from lineproof.beams.continuous.model import ANALYSIS, Model, near_support
 from lineproof.beams.continuous.reactions import record_reactions
 from lineproof.beams.continuous.support_moments import SupportMoments
+from lineproof.beams.continuous.support_turning import record_support_moments, symbols_of_moments
 from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered
 from lineproof.formula import Symbol
 
@@ -43,6 +44,7 @@ def record_analysis(model: Model) -> None:
             moments.record()
             scopes[group] = moments.scope
         record_reactions(model, scopes)
+        record_support_moments(model, scopes)
 
 
 def _cases_text(model: Model) -> str:
@@ -107,6 +109,7 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                     f"{support},{group.text}",
                     f"reaction of support {support}, {words}, unfactored",
                 )
+    yield from symbols_of_moments(model, groups_of(model))
     for support in range(1, model.spans + 2):
         what = f"least factored reaction of support {support}"
         yield numbered(f"R_u{support}", "R", f"u,{support}", what)

@@ -31,8 +31,8 @@ from lineproof.beams.continuous.resistance_demand import stretches_at
 from lineproof.beams.continuous.restraint import left_out
 from lineproof.beams.continuous.summary_supports import COLUMNS as FOR_COLUMNS
 from lineproof.beams.continuous.summary_supports import TITLE as FOR_SUPPORTS
+from lineproof.beams.continuous.summary_supports import TURNING, support_rows, turning_table
 from lineproof.beams.continuous.summary_supports import WIDTHS as FOR_WIDTHS
-from lineproof.beams.continuous.summary_supports import support_rows
 from lineproof.beams.continuous.summary_tables import (
     FLEXURE,
     FLEXURE_WIDTHS,
@@ -99,6 +99,10 @@ def record_summary(design: Design, cures: Found) -> None:
         if model.imported is not None:
             title = REACTIONS_TITLE
         _table(sheet, "reactions", title, columns, rows, REACTIONS, csv="reactions")
+        columns, rows = turning_table(model)
+        if rows:
+            _table(sheet, "support-moments", TURNING, columns, rows, REACTIONS + 1,
+                   csv="support-moments")  # fmt: skip
         _record_envelopes(design)
 
 

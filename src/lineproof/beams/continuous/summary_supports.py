@@ -4,14 +4,19 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.anchorage import tie_spacing
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.summary_tables import Row
+from lineproof.beams.continuous.model import ANALYSIS, Model
+from lineproof.beams.continuous.summary_tables import NONE, Row, printed
+from lineproof.beams.continuous.support_turning import TORQUES
+from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.standards.a23_3 import shear_bars
 from lineproof.standards.a23_3.bars import BARS
 
 TITLE = "What the design of the supports must show; not in the drawings and schedules here"
 COLUMNS = ["Support", "In the joint"]
+TURNING = "Moments and torques on the supports, unfactored, by load type"
 WIDTHS = (20.0, 140.0)
 
 
@@ -21,6 +26,31 @@ def support_rows(design: Design) -> Iterator[Row]:
         if design.outline.supports[number - 1].kind != "free":
             yield from _hangers(design, number)
         yield from _hooks(design, number)
+
+
+def turning_table(model: Model) -> tuple[list[str], list[Row]]:
+    """Return the unfactored moments and torques that supports take, by load type; no rows of none.
+
+    For the design of what carries the beam, beside the reactions.
+    """
+    parts = (part for part in model.sheet.parts if part.key in (ANALYSIS, TORQUES))
+    entries = {name: entry for part in parts for name, entry in part.entries.items()}
+    supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
+    kinds = [(f"{{}}{code(kind)}", KINDS[kind], kind in LIVE) for kind in KINDS]
+    asked = [("M_c" + mark, f"{'largest ' * live}M, {words}, kN.m") for mark, words, live in kinds]
+    asked += [("M_cm" + mark, f"least M, {words}, kN.m") for mark, words, live in kinds if live]
+    asked += [("T_c" + mark, f"{'largest ' * live}T, {words}, kN.m") for mark, words, live in kinds]
+    kept = [
+        (mark, words) for mark, words in asked if any(mark.format(j) in entries for j in supports)
+    ]
+    rows = []
+    for j in supports:
+        found = [entries.get(mark.format(j)) for mark, _ in kept]
+        there = [entry for entry in found if entry is not None]
+        if there:
+            cells = (NONE if entry is None else printed(entry.value, "kN.m") for entry in found)
+            rows.append(Row((str(j), model.inputs.supports[j - 1].carrier, *cells), there[-1]))
+    return ["Support", "On", *(words for _, words in kept)], rows
 
 
 def _hangers(design: Design, number: int) -> Iterator[Row]:

@@ -34,7 +34,7 @@ SHEAR = ["Place", "Load case", "Stirrups", "V_f, kN", "V_c, kN", "V_s, kN", "V_r
 SHEAR_WIDTHS = (26.0, 46.0, 24.0, 14.0, 14.0, 14.0, 14.0, 0.0)
 SERVICE = ["Place", "Check", "Demand", "Limit", "Ratio"]
 PAIR = 2
-_NONE = "–"
+NONE = "–"
 """A cell of numbers where there is none."""
 _DIGITS = 3
 """Digits that a value of a summary shows at least."""
@@ -252,7 +252,7 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
         names += [f"R_m{j}{code(kind)}" for kind in lowered]
         for name in names:
             entry = entries.get(name)
-            cells.append(_NONE if entry is None else printed(entry.value, "kN"))
+            cells.append(NONE if entry is None else printed(entry.value, "kN"))
             last = entry if entry is not None else last
         rows.append(Row((str(j), model.inputs.supports[j - 1].carrier, *cells), last))
     return columns, rows

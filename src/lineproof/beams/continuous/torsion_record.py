@@ -46,7 +46,7 @@ def record_span_torsion(
     sheet = steps.sheet
     made = {}
     for kind, torque in torsion.torques.items():
-        name = _symbol(kind)
+        name = torque_symbol(kind)
         made[name] = sheet.given(
             name, f"{torque / 1000:.12g} kN.m/m", f"torque per length by {_KINDS.get(kind, kind)}",
             source="torques of the inputs",
@@ -73,13 +73,13 @@ def record_span_torsion(
 def section_of_torsion(sheet: Sheet, span: int, torsion: SpanTorsion) -> dict[str, Entry]:
     """Return what :func:`record_span_torsion` recorded in the part of a span."""
     entries = sheet.entries_of(f"torsion-{span}")
-    names = ("T_cr", "A_oh", "p_h", "A_o", *(_symbol(kind) for kind in torsion.torques))
+    names = ("T_cr", "A_oh", "p_h", "A_o", *(torque_symbol(kind) for kind in torsion.torques))
     made = {name: entries[name] for name in names}
     whole = torsion.compatibility and clause.T_CR_FLANGE.symbol in entries
     return made | {"T_crd": entries[clause.T_CR_FLANGE.symbol if whole else "T_cr"]}
 
 
-def _symbol(kind: str) -> str:
+def torque_symbol(kind: str) -> str:
     """Return the symbol of the torque per length by a load type."""
     return f"t_{kind.replace('_', '')}"
 
@@ -128,10 +128,11 @@ def record_torsion(steps: Steps, basis: ShearBasis, section: Turned) -> None:
 
 def _record_torque(steps: Steps, section: Turned) -> Entry:
     """Record the torsion at a section by the torques along its span."""
-    terms = " + ".join(f"{factor:.12g}*{_symbol(kind)}" for kind, _, factor in section.torques)
-    if any(torque * factor < 0 for _, torque, factor in section.torques):
+    factors = [(torque_symbol(kind), torque, factor) for kind, torque, factor in section.torques]
+    terms = " + ".join(f"{factor:.12g}*{name}" for name, _, factor in factors)
+    if any(torque * factor < 0 for _, torque, factor in factors):
         terms = f"abs({terms})"
-    bound: dict[str, Any] = {_symbol(k): steps.entry(_symbol(k)) for k, _, _ in section.torques}
+    bound: dict[str, Any] = {name: steps.entry(name) for name, _, _ in factors}
     t_f = steps.sheet.line(f"t_f = {terms}", title="Torque per length of this load case", **bound)
     steps.bind(t_f=t_f)
     if section.place == "station":
