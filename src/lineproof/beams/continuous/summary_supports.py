@@ -16,7 +16,7 @@ from lineproof.standards.a23_3.bars import BARS
 
 TITLE = "What the design of the supports must show; not in the drawings and schedules here"
 COLUMNS = ["Support", "In the joint"]
-TURNING = "Moments and torques on the supports, unfactored, by load type"
+TURNING = "Moments, clockwise positive, and torques on the supports, unfactored, by load type"
 WIDTHS = (20.0, 140.0)
 
 
