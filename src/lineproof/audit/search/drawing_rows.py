@@ -8,6 +8,7 @@ from dataclasses import dataclass, field
 from typing import Any
 
 from lineproof.audit.graph import Graph, Node
+from lineproof.audit.search.stirrup_rows import first_column, last_column
 from lineproof.errors import UserError
 from lineproof.quantity import echo
 from lineproof.record import Record
@@ -220,7 +221,7 @@ def _stirrups(graph: Graph) -> Iterator[Item]:
         span = row["Span"]
         counts[span] = counts.get(span, 0) + 1
         place = f"span {span}, zone {counts[span]}"
-        start, end = _number(row, _first(row)), _number(row, _last(row))
+        start, end = _number(row, first_column(row)), _number(row, last_column(row))
         spacing, legs = _number(row, "Spacing, mm"), int(_number(row, "Legs"))
         area = area_of(legs, row["Stirrups"])
         text = f"{legs} legs {row['Stirrups']}"
@@ -237,17 +238,7 @@ def _stirrups(graph: Graph) -> Iterator[Item]:
 
 def _in_clear_span(graph: Graph, row: Mapping[str, str]) -> bool:
     length = graph.stored.get(f"span-{row['Span']}/l_n", float("inf"))
-    return 0 <= _number(row, _first(row)) <= length
-
-
-def _first(row: Mapping[str, str]) -> str:
-    """Return the column of the first stirrup of a zone; records made earlier call it From."""
-    return next(name for name in row if name.startswith(("First", "From")))
-
-
-def _last(row: Mapping[str, str]) -> str:
-    """Return the column of the last stirrup of a zone; records made earlier call it To."""
-    return next(name for name in row if name.startswith(("Last", "To")))
+    return 0 <= _number(row, first_column(row)) <= length
 
 
 def _sections_in(

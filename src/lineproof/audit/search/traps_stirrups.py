@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 
 from lineproof.audit.data import Severity
+from lineproof.audit.search.stirrup_rows import first_column
 from lineproof.audit.search.traps_view import (
     Caught,
     Remark,
@@ -105,8 +106,8 @@ def _open_stirrups(view: View) -> Iterator[Remark]:
 
 
 def _first(row: Mapping[str, str]) -> str:
-    """Return the place of the first stirrup; records made earlier call its column From."""
-    return next((row[name] for name in row if name.startswith(("First", "From"))), "")
+    """Return the place of the first stirrup of a zone, as printed."""
+    return row.get(first_column(row), "")
 
 
 def _within(view: View, row: Mapping[str, str]) -> bool:
