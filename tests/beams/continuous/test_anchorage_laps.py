@@ -9,8 +9,6 @@ import pytest
 
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.anchorage_record import (
-    record_crowded,
-    record_laps,
     record_lengths,
 )
 from lineproof.beams.continuous.beside import crowded, tightest
@@ -21,6 +19,7 @@ from lineproof.beams.continuous.laps import (
     lap_length,
     split,
 )
+from lineproof.beams.continuous.laps_record import record_crowded, record_laps
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.errors import UserError
 

@@ -11,7 +11,7 @@ from lineproof.beams.bars import BarLayer, spaced
 from lineproof.beams.continuous.anchorage import Bar, clear_distance, value
 from lineproof.beams.continuous.detailing_data import Basis, Designed
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import PAIR, lap_pairs, span_at
+from lineproof.beams.continuous.resistance import PAIR, depth_of, lap_pairs
 from lineproof.standards.a23_3 import bars as bar_clause
 
 NEAR = 1e-6
@@ -115,15 +115,9 @@ def layers_of(designed: Designed, runs: Sequence[BarRun]) -> list[list[BarRun]]:
     made: dict[tuple[str, int, float], list[BarRun]] = {}
     for run in runs:
         if run.place == "web":
-            depth = _depth(designed, run) if run.face == "bottom" else 0.0
+            depth = depth_of(designed.outline, run) if run.face == "bottom" else 0.0
             made.setdefault((run.face, run.layer, depth), []).append(run)
     return [made[key] for key in sorted(made)]
-
-
-def _depth(designed: Designed, run: BarRun) -> float:
-    """Return the depth of the span in which the middle of a run lies [mm]."""
-    outline = designed.outline
-    return outline.depths[span_at(outline, (run.start + run.end) / 2) - 1]
 
 
 def layer_with(designed: Designed, runs: Sequence[BarRun], run: BarRun) -> list[BarRun]:

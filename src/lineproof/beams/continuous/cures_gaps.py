@@ -27,7 +27,7 @@ from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_given import bottom_places, fit, section_bars_of
 from lineproof.beams.continuous.laps import bad_laps
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import Standing, provide, stand
+from lineproof.beams.continuous.resistance import Standing, provide, stand, yield_force
 from lineproof.beams.continuous.resistance_cover import (
     COUNT,
     COVERAGE,
@@ -39,7 +39,6 @@ from lineproof.beams.continuous.resistance_cover import (
     ratios,
     worst_key,
     worst_of,
-    yield_force,
 )
 from lineproof.beams.continuous.resistance_demand import NOTHING, SpanDemand, demand_at, demand_of
 from lineproof.errors import UserError

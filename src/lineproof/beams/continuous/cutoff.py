@@ -26,8 +26,9 @@ from lineproof.beams.continuous.resistance import (
     provide,
     section_depth,
     shear_depth,
+    yield_force,
 )
-from lineproof.beams.continuous.resistance_cover import ratios, yield_force
+from lineproof.beams.continuous.resistance_cover import ratios
 from lineproof.beams.continuous.resistance_demand import (
     NOTHING,
     SpanDemand,

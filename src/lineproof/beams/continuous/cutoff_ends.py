@@ -60,7 +60,7 @@ class SideOf:
 def whole(designed: Designed, runs: Iterable[BarRun], run: BarRun, towards: End) -> BarRun:
     """Return the last of the like bars that a run is lapped with, one after the other."""
     kept = tuple(runs)
-    pairs = level_pairs(designed, kept, lapped)
+    pairs = level_pairs(designed.outline, kept, lapped)
     after = dict(pairs) if towards == "right" else {j: i for i, j in pairs}
     index = next((i for i, other in enumerate(kept) if other is run), -1)
     while index in after:

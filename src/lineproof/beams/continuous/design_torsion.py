@@ -17,8 +17,7 @@ from lineproof.beams.choice import SIZES
 from lineproof.beams.continuous.anchorage import fits_hook
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import Standing
-from lineproof.beams.continuous.resistance_cover import yield_force
+from lineproof.beams.continuous.resistance import Standing, yield_force
 from lineproof.beams.continuous.resistance_demand import end_tension
 from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.errors import UserError

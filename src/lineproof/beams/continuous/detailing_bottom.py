@@ -48,8 +48,7 @@ from lineproof.beams.continuous.detailing_through import run_through
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_between, split
 from lineproof.beams.continuous.layout import BarRun, Hook
-from lineproof.beams.continuous.resistance import stand
-from lineproof.beams.continuous.resistance_cover import yield_force
+from lineproof.beams.continuous.resistance import stand, yield_force
 from lineproof.beams.continuous.resistance_demand import demand_at, end_tension
 from lineproof.standards.a23_3 import cutoff as clause
 

@@ -7,8 +7,6 @@ from dataclasses import replace
 from lineproof.beams.continuous.anchorage_record import (
     Lengths,
     Writers,
-    record_crowded,
-    record_laps,
     record_lengths,
     sizes_of,
 )
@@ -28,6 +26,7 @@ from lineproof.beams.continuous.cutoff_support import (
     record_zero_moment,
 )
 from lineproof.beams.continuous.detailing_bottom import SIDES
+from lineproof.beams.continuous.laps_record import record_crowded, record_laps
 from lineproof.beams.continuous.resistance import top_layers
 from lineproof.beams.continuous.resistance_cover import COUNT, Coverage
 from lineproof.beams.continuous.resistance_record import record_coverage

@@ -10,7 +10,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from lineproof.beams.continuous.layout import BarRun, BeamOutline
-from lineproof.beams.continuous.resistance import lap_pairs, span_at
+from lineproof.beams.continuous.resistance import level_pairs
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,12 +38,8 @@ class Strings:
 
 
 def strings_of(outline: BeamOutline, runs: Sequence[BarRun]) -> Strings:
-    """Return the strings of a beam; bottom bars are not lapped where the soffit steps."""
-    laps = tuple(
-        (i, j)
-        for i, j in lap_pairs(runs)
-        if runs[i].face == "top" or _depth(outline, runs[i]) == _depth(outline, runs[j])
-    )
+    """Return the strings of a beam, which end where the soffit steps."""
+    laps = level_pairs(outline, runs)
     after, first = dict(laps), {j for _, j in laps}
     reach: dict[int, float] = {}
     for start in (i for i in range(len(runs)) if i not in first):
@@ -52,10 +48,6 @@ def strings_of(outline: BeamOutline, runs: Sequence[BarRun]) -> Strings:
             members.append(after[members[-1]])
         reach |= dict.fromkeys(members, runs[members[-1]].end - runs[start].start)
     return Strings(laps, reach)
-
-
-def _depth(outline: BeamOutline, run: BarRun) -> float:
-    return outline.depths[span_at(outline, (run.start + run.end) / 2) - 1]
 
 
 def places_of(

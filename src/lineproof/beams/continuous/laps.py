@@ -42,7 +42,9 @@ def lap_between(designed: Designed, first: BarRun, second: BarRun) -> float:
 def bad_laps(designed: Designed, runs: Sequence[BarRun]) -> frozenset[tuple[int, int]]:
     """Return the laps that are too short or of bars too thick to be lapped, by places in runs."""
     return frozenset(
-        (i, j) for i, j in level_pairs(designed, runs) if not _laps(designed, runs[i], runs[j])
+        (i, j)
+        for i, j in level_pairs(designed.outline, runs)
+        if not _laps(designed, runs[i], runs[j])
     )
 
 

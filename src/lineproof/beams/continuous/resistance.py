@@ -115,7 +115,7 @@ def lap_pairs(
 
 
 def level_pairs(
-    designed: Designed,
+    outline: BeamOutline,
     runs: Sequence[BarRun],
     test: Callable[[BarRun, BarRun], bool] = in_line,
 ) -> tuple[tuple[int, int], ...]:
@@ -123,13 +123,13 @@ def level_pairs(
     return tuple(
         (i, j)
         for i, j in lap_pairs(runs, test)
-        if runs[i].face == "top" or _depth_at(designed, runs[i]) == _depth_at(designed, runs[j])
+        if runs[i].face == "top" or depth_of(outline, runs[i]) == depth_of(outline, runs[j])
     )
 
 
-def _depth_at(designed: Designed, run: BarRun) -> float:
-    """Return the depth of the span that the middle of a run lies in."""
-    return designed.outline.depths[span_at(designed.outline, (run.start + run.end) / 2) - 1]
+def depth_of(outline: BeamOutline, run: BarRun) -> float:
+    """Return the depth of the span that the middle of a run lies in [mm]."""
+    return outline.depths[span_at(outline, (run.start + run.end) / 2) - 1]
 
 
 def distance_of(designed: Designed, run: BarRun) -> float:
@@ -166,7 +166,7 @@ def first_layers(designed: Designed, run: BarRun) -> Sequence[BarLayer]:
 def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
     """Return the runs with the lengths over which their stress rises."""
     kept = [run for run in runs if run.place != "side face"]
-    pairs = level_pairs(designed, kept, lapped)
+    pairs = level_pairs(designed.outline, kept, lapped)
     ends = {i: kept[i].end - kept[j].start for i, j in pairs}
     starts = {j: kept[i].end - kept[j].start for i, j in pairs}
     last = len(designed.outline.supports)
@@ -187,6 +187,11 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
             )
         )  # fmt: skip
     return tuple(made)
+
+
+def yield_force(designed: Designed) -> float:
+    """Return the factored force of 1 mm2 of bars at yield [N]."""
+    return designed.strengths.phi_s * designed.strengths.f_y
 
 
 def effective_depth(designed: Designed, layers: BarLayers, h: float) -> float:
@@ -228,7 +233,7 @@ def moment_of(designed: Designed, A: Floats, d: Floats, b: Floats) -> Floats:
     """Return the moment resistance of developed bars of area A at depth d; web and flange b."""
     s, outline = designed.strengths, designed.outline
     stress = s.alpha_1 * s.phi_c * s.f_c
-    force = s.phi_s * s.f_y * A
+    force = yield_force(designed) * A
     whole = force / (stress * b)
     flange = stress * (b - outline.b_w) * outline.h_f
     web = (force - flange) / (stress * outline.b_w)
@@ -252,7 +257,7 @@ def area_for(designed: Designed, M: float, d: float, b: float) -> float:
     under = d * d - 2 * M / (stress * b)
     if under < 0:
         return float("inf")
-    return float((flange + stress * b * (d - under**0.5)) / (s.phi_s * s.f_y))
+    return float((flange + stress * b * (d - under**0.5)) / yield_force(designed))
 
 
 @dataclass(frozen=True, eq=False, slots=True)

@@ -11,14 +11,14 @@ from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, Face
-from lineproof.beams.continuous.resistance import Provided, Standing, provide, stand
+from lineproof.beams.continuous.resistance import Provided, Standing, provide, stand, yield_force
 from lineproof.beams.continuous.resistance_demand import (
-    NOTHING,
     Side,
     SpanDemand,
     demand_at,
     demand_of,
 )
+from lineproof.beams.continuous.resistance_ratio import ratio_of, ratios_of
 from lineproof.beams.continuous.resistance_torsion import TurnedStation, worst_turned
 
 FACES: tuple[Face, Face] = ("bottom", "top")
@@ -137,33 +137,14 @@ class Coverage:
         return not self.gaps
 
 
-def ratio_of(demand: float, provided: float) -> float:
-    """Return demand over resistance; infinite where something is asked and nothing provided."""
-    if demand <= NOTHING:
-        return 0.0
-    return demand / provided if provided > 0 else float("inf")
-
-
 def ratios(side: Side, provided: Provided, force: float, turned: Floats | None = None) -> Floats:
     """Return demand over resistance at every station; ``force`` is that of 1 mm2 at yield.
 
     ``turned`` is the tension with torsion, if it is to count as well.
     """
     F_f = side.F if turned is None else np.maximum(side.F, turned)
-    made: Floats = np.maximum(_ratios(side.M, provided.M_r), _ratios(F_f, provided.A * force))
+    made: Floats = np.maximum(ratios_of(side.M, provided.M_r), ratios_of(F_f, provided.A * force))
     return made
-
-
-def _ratios(demand: Floats, provided: Floats) -> Floats:
-    needed = demand > NOTHING
-    with np.errstate(divide="ignore", invalid="ignore"):
-        made: Floats = np.where(needed, np.where(provided > 0, demand / provided, np.inf), 0.0)
-    return made
-
-
-def yield_force(designed: Designed) -> float:
-    """Return the factored force of 1 mm2 of bars at yield [N]."""
-    return designed.strengths.phi_s * designed.strengths.f_y
 
 
 def covered(designed: Designed, runs: Iterable[BarRun], count: int = COUNT) -> Coverage:
@@ -194,10 +175,10 @@ def _apart(
 ) -> tuple[Floats, Floats]:
     """Return the ratios of the moment and, between the faces, of the tension."""
     side = demand.side(face)
-    tension = _ratios(side.F, provided.A * yield_force(designed))
+    tension = ratios_of(side.F, provided.A * yield_force(designed))
     start, end = designed.outline.faces(demand.span)
     clear = (demand.x >= start) & (demand.x <= end)
-    return _ratios(side.M, provided.M_r), np.where(clear, tension, -1.0)
+    return ratios_of(side.M, provided.M_r), np.where(clear, tension, -1.0)
 
 
 def _station(

@@ -19,7 +19,7 @@ from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.detailing_data import THETA, Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.layout import Face
-from lineproof.beams.continuous.resistance import area_for, section_depth, shear_depth
+from lineproof.beams.continuous.resistance import area_for, section_depth, shear_depth, yield_force
 from lineproof.standards.a23_3 import shear_bars, torsion
 
 Whole = NDArray[np.intp]
@@ -192,9 +192,8 @@ def cap_of(designed: Designed, face: Face, span: int, end: End) -> float:
     """Return the tension that the largest moment of a face needs alone [N]."""
     support = span if end == "left" else span + 1
     d = section_depth(designed, face, span, support)
-    s = designed.strengths
     b = designed.outline.widths[span - 1] if face == "bottom" else designed.outline.b_w
-    return s.phi_s * s.f_y * area_for(designed, largest(designed, face, span, end), d, b)
+    return yield_force(designed) * area_for(designed, largest(designed, face, span, end), d, b)
 
 
 def largest(designed: Designed, face: Face, span: int, end: End) -> float:

@@ -10,7 +10,7 @@ from lineproof.beams.continuous.anchorage_record import Lengths, Writers
 from lineproof.beams.continuous.cutoff_ends import Runs
 from lineproof.beams.continuous.cutoff_support import Hooks
 from lineproof.beams.continuous.layout import Face
-from lineproof.beams.continuous.resistance import Standing, provide, stand
+from lineproof.beams.continuous.resistance import Standing, provide, stand, yield_force
 from lineproof.beams.continuous.resistance_cover import (
     COUNT,
     COVERAGE,
@@ -20,13 +20,12 @@ from lineproof.beams.continuous.resistance_cover import (
     Station,
     covered,
     gap_key,
-    ratio_of,
     ratios,
     worst_key,
     worst_of,
-    yield_force,
 )
 from lineproof.beams.continuous.resistance_demand import NOTHING, demand_at
+from lineproof.beams.continuous.resistance_ratio import ratio_of
 from lineproof.beams.continuous.resistance_station import (
     Laid,
     record_moment,

@@ -21,8 +21,9 @@ from lineproof.beams.continuous.cutoff_sets import (
 from lineproof.beams.continuous.cutoff_support import Hooks, record_section
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.resistance import Standing, top_layers
-from lineproof.beams.continuous.resistance_cover import ROUND_OFF, Gap, Station, ratio_of
+from lineproof.beams.continuous.resistance_cover import ROUND_OFF, Gap, Station
 from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, stretch_at
+from lineproof.beams.continuous.resistance_ratio import ratio_of
 from lineproof.beams.flexure import required
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion

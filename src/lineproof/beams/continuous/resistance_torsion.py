@@ -14,7 +14,8 @@ import numpy as np
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import Face
-from lineproof.beams.continuous.resistance import Standing, provide
+from lineproof.beams.continuous.resistance import Standing, provide, yield_force
+from lineproof.beams.continuous.resistance_ratio import ratios_of
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,10 +44,8 @@ def worst_turned(
     places, back = np.unique(turned.sections, return_inverse=True)
     x = places + designed.outline.axes[span - 1]
     A = provide(designed, standing, face, x, np.full(len(x), span)).A
-    strength = designed.strengths.phi_s * designed.strengths.f_y
-    held = (A * strength)[back.reshape(force.shape)]
-    with np.errstate(divide="ignore", invalid="ignore"):
-        used = np.where(force > 0, np.where(held > 0, force / held, np.inf), 0.0)
+    held = (A * yield_force(designed))[back.reshape(force.shape)]
+    used = ratios_of(force, held)
     if not used.any():
         return None
     row, column = (int(n) for n in np.unravel_index(int(used.argmax()), used.shape))
