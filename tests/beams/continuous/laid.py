@@ -21,7 +21,7 @@ from lineproof.beams.continuous.detailing_data import (
     ShearStretch,
     Stirrups,
     Strengths,
-    TopBars,
+    SupportTop,
 )
 from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport
@@ -132,10 +132,10 @@ def designed_sections(
             (-forces.hog(j, s).M for s in ("left", "right") if forces.has_span(j, s)), default=0.0
         )
         if M <= 1e6:
-            top.append(TopBars())
+            top.append(SupportTop())
             continue
         h = min(outline.depths[max(j - 2, 0) : j])
-        top.append(TopBars(layers_for(M, h, outline.b_w, most, size)))
+        top.append(SupportTop(layers_for(M, h, outline.b_w, most, size)))
     shear = []
     for k in range(1, len(outline.lengths) + 1):
         _, V = forces.along(k, np.array(forces.beam.faces(k)))

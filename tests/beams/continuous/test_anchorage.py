@@ -12,7 +12,7 @@ from lineproof.beams.continuous.anchorage_record import (
     record_hook,
     record_lengths,
 )
-from lineproof.beams.continuous.detailing_data import Basis, SectionBars, Stirrups, TopBars
+from lineproof.beams.continuous.detailing_data import Basis, SectionBars, Stirrups, SupportTop
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.errors import UserError
 
@@ -148,7 +148,7 @@ def test_recorded_lengths_are_the_numbers(expression: str, shape: str) -> None:
     designed = replace(
         bare,
         basis=replace(bare.basis, expression=expression),  # type: ignore[arg-type]
-        bars=SectionBars((layers,), (TopBars(layers, 4), TopBars(layers, 4)), "15M"),
+        bars=SectionBars((layers,), (SupportTop(layers, 4), SupportTop(layers, 4)), "15M"),
     )
     runs = [
         BarRun("bottom", 1, 4, "25M", 0.0, 7000.0), BarRun("bottom", 2, 2, "20M", 0.0, 7000.0),
@@ -170,8 +170,8 @@ def test_recorded_lengths_are_the_numbers(expression: str, shape: str) -> None:
 def test_ties_earn_nothing_where_top_bars_stand_in_the_overhangs() -> None:
     """Check 12b without the factor 0.8: 426 mm; the ties stay."""
     bare = beam_of(*ONE)
-    top = TopBars((BarLayer(2, "25M"),), 2)
-    spread = replace(bare, bars=SectionBars((), (top, TopBars()), "15M"))
+    top = SupportTop((BarLayer(2, "25M"),), 2)
+    spread = replace(bare, bars=SectionBars((), (top, SupportTop()), "15M"))
     assert hook_at(spread, 1, "25M").l_dh == pytest.approx(425.96, abs=0.1)
     assert hook_at(spread, 1, "25M").tied
     assert hook_at(spread, 2, "25M").l_dh == pytest.approx(0.8 * 425.96, abs=0.1)

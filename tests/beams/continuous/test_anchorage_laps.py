@@ -12,7 +12,7 @@ from lineproof.beams.continuous.anchorage_record import (
     record_lengths,
 )
 from lineproof.beams.continuous.beside import crowded, tightest
-from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars
+from lineproof.beams.continuous.detailing_data import Designed, SectionBars, SupportTop
 from lineproof.beams.continuous.laps import (
     cut_length,
     lap_between,
@@ -32,7 +32,9 @@ FOUR = (BarLayer(4, "25M"),)
 def beam(stock: float = 12000.0) -> Designed:
     """Two spans of 9 m, 4-25M at the bottom."""
     bare = beam_of((9000.0, 9000.0), ("elastic",) * 3)
-    return replace(bare, bars=SectionBars((FOUR, FOUR), (TopBars(FOUR),) * 3, "15M"), stock=stock)
+    return replace(
+        bare, bars=SectionBars((FOUR, FOUR), (SupportTop(FOUR),) * 3, "15M"), stock=stock
+    )
 
 
 WHOLE = BarRun("bottom", 1, 2, "25M", -150.0, 18150.0, serves="spans 1 to 2")
@@ -156,7 +158,7 @@ def edge() -> Designed:
     """
     bare = beam_of((7600.0, 7600.0), ("elastic",) * 3, b_w=380.0, width=450.0)
     bottom = ((BarLayer(5, "15M"),), (BarLayer(6, "15M"),))
-    return replace(bare, bars=SectionBars(bottom, (TopBars((BarLayer(2, "15M"),)),) * 3, "15M"))
+    return replace(bare, bars=SectionBars(bottom, (SupportTop((BarLayer(2, "15M"),)),) * 3, "15M"))
 
 
 CORNERS = BarRun("bottom", 1, 2, "15M", -175.0, 7900.0)

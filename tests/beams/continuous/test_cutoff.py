@@ -27,7 +27,12 @@ from lineproof.beams.continuous.cutoff_ends import (
     top_side,
 )
 from lineproof.beams.continuous.detailing_bottom import limit_at_support, support_shear
-from lineproof.beams.continuous.detailing_data import Designed, SectionBars, ShearStretch, TopBars
+from lineproof.beams.continuous.detailing_data import (
+    Designed,
+    SectionBars,
+    ShearStretch,
+    SupportTop,
+)
 from lineproof.beams.continuous.detailing_top import groups_of, long_of
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.standards.a23_3 import cutoff as clause
@@ -43,13 +48,15 @@ def simple_beam() -> Designed:
     """7 m, w_f = 40 kN/m between simple supports: M = 20 x (7 x - x^2)."""
     bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
     shear = (ShearStretch(-200.0, 7200.0, 200e3, 100e3),)
-    return replace(bare, bars=SectionBars((FOUR,), (TopBars(), TopBars()), "15M"), shear=shear)
+    return replace(
+        bare, bars=SectionBars((FOUR,), (SupportTop(), SupportTop()), "15M"), shear=shear
+    )
 
 
 def fixed_beam() -> Designed:
     """8 m, fixed, w_f = 40 kN/m: M = -213.3 at the axes, 106.7 at midspan; zero at 0.2113 l."""
     bare = beam_of((8000.0,), ("fixed", "fixed"), D=20.0, L=10.0)
-    return replace(bare, bars=SectionBars((FOUR,), (TopBars(FOUR), TopBars(FOUR)), "15M"))
+    return replace(bare, bars=SectionBars((FOUR,), (SupportTop(FOUR), SupportTop(FOUR)), "15M"))
 
 
 def test_point_of_no_further_need_by_hand() -> None:
@@ -183,7 +190,7 @@ def test_stirrup_holders_are_no_bars_of_a_support() -> None:
 def test_a_third_of_the_top_bars_is_long() -> None:
     """4-25M and 6 in the overhangs: 5000 mm2, a third 1667: the corners and the inner two."""
     bare = fixed_beam()
-    top = TopBars(FOUR, 6)
+    top = SupportTop(FOUR, 6)
     designed = replace(bare, bars=SectionBars((FOUR,), (top, top), "15M"))
     assert long_of(groups_of(designed, 1)) == 2
     assert long_of(groups_of(bare, 1)) == 1
@@ -194,7 +201,9 @@ def test_top_of_a_span_that_hogs_all_along_has_no_inflection() -> None:
     bare = beam_of((9000.0, 3000.0, 9000.0), ("simple",) * 4)
     designed = replace(
         bare,
-        bars=SectionBars((FOUR,) * 3, (TopBars(), TopBars(FOUR), TopBars(FOUR), TopBars()), "15M"),
+        bars=SectionBars(
+            (FOUR,) * 3, (SupportTop(), SupportTop(FOUR), SupportTop(FOUR), SupportTop()), "15M"
+        ),
     )
     M, _ = bare.forces.along(2, np.array([1500.0]))
     assert M.min() < 0

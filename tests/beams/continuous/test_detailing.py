@@ -15,7 +15,12 @@ from lineproof.beams.continuous.cutoff_ends import bottom_side, passes, top_side
 from lineproof.beams.continuous.cutoff_need import need_of
 from lineproof.beams.continuous.detailing import hook_ties, lay_bars
 from lineproof.beams.continuous.detailing_bottom import lay_bottom
-from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TopBars, TorsionForces
+from lineproof.beams.continuous.detailing_data import (
+    Designed,
+    SectionBars,
+    SupportTop,
+    TorsionForces,
+)
 from lineproof.beams.continuous.detailing_holders import with_holders
 from lineproof.beams.continuous.detailing_record import record_detailing
 from lineproof.beams.continuous.layout import BarRun, BeamOutline
@@ -255,7 +260,7 @@ def test_like_bars_that_would_pass_each_other_run_through() -> None:
         (400.0, [(3, -150.0, 4950.0), (2, 5050.0, 10150.0)]),
     ):
         bare = beam_of((5000.0, 5000.0), ("elastic",) * 3, width=width, b_w=420.0)
-        bars = SectionBars((five, four), (TopBars((BarLayer(2, "25M"),)),) * 3, "15M")
+        bars = SectionBars((five, four), (SupportTop((BarLayer(2, "25M"),)),) * 3, "15M")
         none, cases = np.zeros(2), np.zeros(len(bare.forces.cases))
         x = np.array([0.0, 5000.0])
         at, nothing = np.tile(x, (len(cases), 1)), np.zeros((len(cases), 2))
@@ -340,7 +345,7 @@ def test_bars_too_thick_to_lap_are_refused() -> None:
     """45M over 14 m: longer than the stock, and laps of 45M are not allowed."""
     bare = beam_of((14000.0,), ("simple", "simple"), h=1200.0, b_w=500.0)
     designed = replace(
-        bare, bars=SectionBars(((BarLayer(4, "45M"),),), (TopBars(), TopBars()), "15M")
+        bare, bars=SectionBars(((BarLayer(4, "45M"),),), (SupportTop(), SupportTop()), "15M")
     )
     with pytest.raises(UserError, match=r"45M may not be lapped \(12.14.2\)"):
         lay_bars(designed)

@@ -11,7 +11,7 @@ import pytest
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.detailing import lay_bars
-from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
+from lineproof.beams.continuous.detailing_data import SectionBars, SupportTop
 from lineproof.beams.continuous.detailing_given import beside_gap, read_given_runs, section_bars_of
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_cover import covered
@@ -79,7 +79,7 @@ def test_hooks_of_the_2024_edition_are_refused() -> None:
 
 def test_a_section_that_needs_more_bars_than_stand_there() -> None:
     sections = SectionBars(
-        ((BarLayer(4, "25M"),),), (TopBars(), TopBars((BarLayer(2, "20M"),))), "15M"
+        ((BarLayer(4, "25M"),),), (SupportTop(), SupportTop((BarLayer(2, "20M"),))), "15M"
     )
     with pytest.raises(UserError) as told:
         read_given_runs([GOOD], BASIS, PAIR, sections)

@@ -8,7 +8,12 @@ import numpy as np
 import pytest
 
 from lineproof.beams.bars import BarLayer
-from lineproof.beams.continuous.detailing_data import Designed, SectionBars, ShearStretch, TopBars
+from lineproof.beams.continuous.detailing_data import (
+    Designed,
+    SectionBars,
+    ShearStretch,
+    SupportTop,
+)
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import (
     area_for,
@@ -30,7 +35,7 @@ FOUR = (BarLayer(4, "25M"),)
 def simple_beam(**more: object) -> Designed:
     """7 m between simple supports 400 mm wide, D 20, L 10: w_f = 1.25 x 20 + 1.5 x 10 = 40 kN/m."""
     bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0, **more)  # type: ignore[arg-type]
-    return replace(bare, bars=SectionBars((FOUR,), (TopBars(), TopBars()), "15M"))
+    return replace(bare, bars=SectionBars((FOUR,), (SupportTop(), SupportTop()), "15M"))
 
 
 def bottom(start: float, end: float, number: int = 4, **more: object) -> BarRun:
@@ -179,7 +184,8 @@ def test_free_end_asks_nothing_inside_its_cover() -> None:
     """A cantilever's bars start 50 mm from its tip; the first 100 mm ask nothing."""
     designed = beam_of((2000.0, 7000.0), ("free", "elastic", "elastic"))
     designed = replace(
-        designed, bars=SectionBars((FOUR, FOUR), (TopBars(), TopBars(FOUR), TopBars(FOUR)), "15M")
+        designed,
+        bars=SectionBars((FOUR, FOUR), (SupportTop(), SupportTop(FOUR), SupportTop(FOUR)), "15M"),
     )
     found = covered(designed, [
         BarRun("top", 1, 4, "25M", 50.0, 8950.0, hook_end="90"),

@@ -8,7 +8,7 @@ import pytest
 
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.bars_counted import record_area
-from lineproof.beams.continuous.detailing_data import SectionBars, TopBars
+from lineproof.beams.continuous.detailing_data import SectionBars, SupportTop
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over, span_numbers
@@ -28,7 +28,7 @@ def test_lapped_bars_count_as_one_all_along(more: float) -> None:
     """
     four = (BarLayer(4, "25M"),)
     bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
-    designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
+    designed = replace(bare, bars=SectionBars((four,), (SupportTop(), SupportTop()), "15M"))
     overlap = 1.3 * 0.45 * 400 / 35**0.5 * 25.2 + more
     runs = [
         BarRun("bottom", 1, 2, "25M", -150.0, 3000.0 + overlap),
@@ -47,7 +47,7 @@ def over_a_short_lap() -> tuple[BarsOver, ...]:
     """What counts of 2-25M lapped over 300 mm, from 3.0 to 3.3 m of a span of 7 m."""
     four = (BarLayer(4, "25M"),)
     bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
-    designed = replace(bare, bars=SectionBars((four,), (TopBars(), TopBars()), "15M"))
+    designed = replace(bare, bars=SectionBars((four,), (SupportTop(), SupportTop()), "15M"))
     runs = [
         BarRun("bottom", 1, 2, "25M", -150.0, 3300.0),
         BarRun("bottom", 1, 2, "25M", 3000.0, 7150.0),

@@ -3,14 +3,22 @@
 from __future__ import annotations
 
 import math
+from dataclasses import replace
 
+import numpy as np
 import pytest
 
 from lineproof import beams
+from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.design import Design
+from lineproof.beams.continuous.detailing_data import SectionBars, SupportTop, TorsionForces
+from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import stand
+from lineproof.beams.continuous.resistance_torsion import worst_turned
 from lineproof.record import Entry
 
 from .flow import start
+from .laid import beam_of
 from .test_edge_beam import CALLS, TURNED, edge, failing
 
 TURN = 1.25 * 5.5 + 1.5 * 5.0
@@ -112,3 +120,22 @@ def test_bars_lapped_far_away_count_by_their_development_length(
     """At the largest moment of span 2, 4.2 m from a lap, l_d makes the bars whole, not l_s."""
     A_sd = edge_beam.sheet.entries_of("coverage-bottom")["A_sd"]
     assert {e.symbol for e in A_sd.args if e.symbol.startswith("l_")} == {"l_av", "l_d"}
+
+
+def test_what_round_off_asks_where_no_bars_stand_hides_no_station() -> None:
+    """0.4 kN beside bars that begin at 500 mm is nothing; at midspan 300 kN ask for 4-25M."""
+    bare = beam_of((7000.0,), ("simple", "simple"))
+    cases = len(bare.forces.cases)
+    places, force = np.tile([100.0, 3500.0], (cases, 1)), np.tile([400.0, 300e3], (cases, 1))
+    none, ends = np.zeros(2), np.zeros(cases)
+    turned = TorsionForces(
+        places[0], none, none, (ends, ends), 1.0, 1.0, places, (force, np.zeros_like(force))
+    )
+    bars = SectionBars(((BarLayer(4, "25M"),),), (SupportTop(), SupportTop()), "15M")
+    designed = replace(bare, bars=bars, torsion={1: turned})
+    standing = stand(designed, [BarRun("bottom", 1, 4, "25M", 500.0, 6500.0)])
+    worst = worst_turned(designed, standing, "bottom", 1)
+    assert worst is not None
+    assert (worst.local, worst.F) == (3500.0, 300e3)
+    assert worst.F_r == pytest.approx(4 * 500 * 0.85 * 400)
+    assert worst_turned(designed, standing, "top", 1) is None

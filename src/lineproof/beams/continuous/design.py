@@ -32,8 +32,8 @@ from lineproof.beams.continuous.detailing_data import (
     SectionBars,
     Stirrups,
     Strengths,
+    SupportTop,
 )
-from lineproof.beams.continuous.detailing_data import TopBars as LaidTop
 from lineproof.beams.continuous.detailing_given import (
     beside_gap,
     bottom_places,
@@ -326,7 +326,7 @@ def _given_sections(
     return bottom, {support: each for support, each in top.items() if each is not None}
 
 
-def _as_chosen(top: LaidTop, model: Model) -> TopBars | None:
+def _as_chosen(top: SupportTop, model: Model) -> TopBars | None:
     """Return top bars that stand at a place as those of a section; None without any in the web."""
     sides = SIDES[model.inputs.shape]
     if not top.web:
@@ -360,12 +360,14 @@ def _section_bars(
         layers_of(bottom[k]) if k in bottom else beside.get(k) or holders
         for k in range(1, model.spans + 1)
     ]
-    tops = [_laid_top(top_of(top[j])) if j in top else LaidTop() for j in range(1, model.spans + 2)]
+    tops = [
+        _laid_top(top_of(top[j])) if j in top else SupportTop() for j in range(1, model.spans + 2)
+    ]
     return SectionBars(tuple(bottoms), tuple(tops), size)
 
 
-def _laid_top(top: TopBars) -> LaidTop:
-    return LaidTop(top.layers, top.sides * top.overhang, top.overhang_size)
+def _laid_top(top: TopBars) -> SupportTop:
+    return SupportTop(top.layers, top.sides * top.overhang, top.overhang_size)
 
 
 def layers_of(chosen: Chosen) -> BarLayers:

@@ -56,7 +56,7 @@ class Stirrups:
 
 
 @dataclass(frozen=True, slots=True)
-class TopBars:
+class SupportTop:
     """Top bars of a support: layers in the web, and a count in all overhangs together.
 
     Those of the overhangs have the size of the first layer but for ``overhang_size``.
@@ -83,7 +83,7 @@ class SectionBars:
     """
 
     bottom: tuple[BarLayers, ...]
-    top: tuple[TopBars, ...]
+    top: tuple[SupportTop, ...]
     holders: str
 
 

@@ -12,7 +12,7 @@ from typing import Any, get_args
 from lineproof.beams.bars import BarLayer, BarLayers, layer_of
 from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, value
 from lineproof.beams.continuous.cutoff_ends import at_section, top_section
-from lineproof.beams.continuous.detailing_data import Basis, SectionBars, TopBars
+from lineproof.beams.continuous.detailing_data import Basis, SectionBars, SupportTop
 from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
 from lineproof.beams.continuous.resistance import lap_pairs
@@ -254,7 +254,7 @@ def section_bars_of(
     top = []
     for support, built in enumerate(outline.supports, start=1):
         x, name = top_section(outline, support), f"support {support}"
-        top.append(TopBars() if built.kind == "free" else _top_at(kept, x, name, faults))
+        top.append(SupportTop() if built.kind == "free" else _top_at(kept, x, name, faults))
     faults.raise_if_any()
     return SectionBars(tuple(bottom), tuple(top), holders)
 
@@ -272,7 +272,7 @@ def bottom_places(outline: BeamOutline, forces: Forces) -> list[float]:
     ]
 
 
-def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
+def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> SupportTop:
     """Return the top bars that stand at a place, x from the axis of support 1 [mm].
 
     Raises :class:`UserError` for layers of three sizes and overhangs of two.
@@ -283,7 +283,7 @@ def top_bars_at(runs: Iterable[BarRun], x: float, name: str) -> TopBars:
     return made
 
 
-def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) -> TopBars:
+def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) -> SupportTop:
     beside = [r for r in at_section(runs, "top", x) if r.place == "overhang"]
     number, web = sum(r.number for r in beside), _web_at(runs, "top", x, name, faults)
     sizes = sorted({r.size for r in beside}, reverse=True)
@@ -293,7 +293,7 @@ def _top_at(runs: tuple[BarRun, ...], x: float, name: str, faults: FaultList) ->
             f"there, such as {sizes[-1]}"
         )
     of_web = not beside or (bool(web) and sizes == [web[0].size])
-    return TopBars(web, number, "" if of_web else sizes[0])
+    return SupportTop(web, number, "" if of_web else sizes[0])
 
 
 def beside_gap(runs: Iterable[BarRun], outline: BeamOutline, span: int, at: float) -> BarLayers:
