@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.figure_section import Shown, bars, choose_scale, outline
+from lineproof.beams.figure_section import bars
+from lineproof.beams.figure_section_concrete import Shown, choose_scale, outline
 from lineproof.beams.section_shape import BarRow, SectionShape
 from lineproof.drawing import (
     LIGHT,

@@ -14,7 +14,7 @@ from lineproof.beams.continuous.figure_cross_section_steel import (
     web_circles,
 )
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face
-from lineproof.beams.figure_section import Shown, choose_scale, outline
+from lineproof.beams.figure_section_concrete import Shown, choose_scale, outline
 from lineproof.beams.section_shape import SectionShape
 from lineproof.drawing import (
     TEXT_SIZE,

@@ -20,7 +20,7 @@ from lineproof.beams.continuous.figure_cross_section_places import (
 )
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face, StirrupZone
 from lineproof.beams.continuous.schedule_stirrups import stirrup_set
-from lineproof.beams.figure_section import Shown
+from lineproof.beams.figure_section_concrete import Shown
 from lineproof.beams.section_shape import SectionShape
 from lineproof.drawing import THIN, Circle, Shape
 from lineproof.standards.a23_3.bars import BARS, LAYER_DISTANCE, LEAST_CLEAR
