@@ -132,12 +132,23 @@ def read_inputs(
 ) -> tuple[ContinuousInputs, CodePair]:
     """Read and check all inputs and the code pair; raises :class:`UserError` with every fault."""
     reader = InputReader(given)
-    take, some = reader.take, reader.take_if_given
     pair = reader.code_pair(project)
-    spans = take("spans", read_spans) or ()
-    fields: dict[str, Any] = {
+    spans = reader.take("spans", read_spans) or ()
+    fields: dict[str, Any] = {"spans": spans} | _read_alone(reader)
+    reader.take("web_openings", no_openings)
+    if spans:
+        fields |= _read_by_span(reader, given, spans)
+    fields["forces_file"] = reader.take("forces_csv", read_forces_file, given, fields)
+    _check_together(fields, given, reader.faults)
+    reader.faults.raise_if_any()
+    return ContinuousInputs(**fields), pair
+
+
+def _read_alone(reader: InputReader) -> dict[str, Any]:
+    """Read the inputs whose meaning does not depend on the number of spans."""
+    take, some = reader.take, reader.take_if_given
+    return {
         "shape": take("shape", one_of, SHAPES),
-        "spans": spans,
         **{name: take(name, read_input)
            for name in ("spacing", "b_w", "f_c", "gamma_c", "superimposed", "cover", "aggregate")},
         **{name: some(name, read_input)
@@ -166,31 +177,36 @@ def read_inputs(
         "torsion": take("torsion", one_of, KINDS_OF_TORSION),
         "slab_bars": some("slab_bars", read_slab_bars),
     }  # fmt: skip
-    take("web_openings", no_openings)
-    if spans:
-        count = len(spans)
-        fields |= {
-            "depths": take("h", read_depths, count),
-            "supports": take("supports", read_supports, given["columns"], count),
-            "loads": take("loads", read_loads, spans),
-            "redistribution": take("redistribution", _read_redistribution) or {},
-            "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
-            "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),
-        }
-    fields["forces_file"] = take("forces_csv", read_forces_file, given, fields)
-    check_density(fields, given, reader.faults)
-    check_unit_weight(fields, reader.faults)
-    check_slab(fields, given, reader.faults)
-    check_snow(fields, reader.faults)
-    check_bars_given(fields, reader.faults)
-    check_method(fields, reader.faults)
-    if spans:
-        check_torques(fields, reader.faults)
-        check_construction(fields, reader.faults)
-    if not reader.faults.faults:
-        check_proportions(fields, reader.faults)
-    reader.faults.raise_if_any()
-    return ContinuousInputs(**fields), pair
+
+
+def _read_by_span(
+    reader: InputReader, given: Mapping[str, Any], spans: tuple[Typed, ...]
+) -> dict[str, Any]:
+    """Read the inputs that have a value for every span or support."""
+    take, count = reader.take, len(spans)
+    return {
+        "depths": take("h", read_depths, count),
+        "supports": take("supports", read_supports, given["columns"], count),
+        "loads": take("loads", read_loads, spans),
+        "redistribution": take("redistribution", _read_redistribution) or {},
+        "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
+        "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),
+    }
+
+
+def _check_together(fields: dict[str, Any], given: Mapping[str, Any], faults: FaultList) -> None:
+    """Check what inputs ask of each other; proportions only of inputs that are sound."""
+    check_density(fields, given, faults)
+    check_unit_weight(fields, faults)
+    check_slab(fields, given, faults)
+    check_snow(fields, faults)
+    check_bars_given(fields, faults)
+    check_method(fields, faults)
+    if fields["spans"]:
+        check_torques(fields, faults)
+        check_construction(fields, faults)
+    if not faults.faults:
+        check_proportions(fields, faults)
 
 
 def _read_legs(name: str, given: object) -> int:

@@ -146,29 +146,22 @@ def _section(
     x, length = float(v["x"][row, column]), forces.beam.spans[span - 1].length
     at_end = column in (0, len(check.u) - 1)
     end = _nearer_end(check, x)
+    distance = x if end == "left" else length - x
     critical = check.critical(end)
-    free = (state.numbers.left if end == "left" else state.numbers.right).held == "free"
-    reason = critical.reason[row] if at_end else ""
-    place: Place = "station" if not at_end else ("face" if reason or free else "d_v")
-    key = names.take(f"shear-{span}-{end if at_end else 'along'}")
-    spot = check.at(row, column)
     support = state.numbers.left if end == "left" else state.numbers.right
+    reason = critical.reason[row] if at_end else ""
+    of_face = reason or support.held == "free"
+    place: Place = "station" if not at_end else ("face" if of_face else "d_v")
+    key = names.take(f"shear-{span}-{end if at_end else 'along'}")
     bottom, acting = bool(v["bottom"][row, column]), state.numbers.torsion
+    M, V = float(v["M"][row, column]), float(v["V"][row, column])
     return ShearSection(
         key=key,
-        title=_title(span, end, key, x if end == "left" else length - x, at_end=at_end),
+        title=_title(span, end, key, distance, at_end=at_end),
         span=span,
         end=end,
-        demand=Demand(
-            span,
-            x,
-            state.sides[column],
-            row,
-            forces.cases[row],
-            float(v["M"][row, column]),
-            float(v["V"][row, column]),
-        ),
-        distance=x if end == "left" else length - x,
+        demand=Demand(span, x, state.sides[column], row, forces.cases[row], M, V),
+        distance=distance,
         place=place,
         reason=reason,
         V_pl=float(critical.V_pl[row]) if at_end else 0.0,
@@ -179,7 +172,7 @@ def _section(
         A_s=_area(float(v["A_s"][row, column])),
         A_sp=float(v["A_sp"][row, column]),
         spacing=check.bands[check.owner(row, column)].spacing,
-        spot=spot,
+        spot=check.at(row, column),
         counts=bool(v["counts"][row, column]),
         torques=torques_of(check, forces, row),
         compatibility=acting is not None and acting.compatibility,
@@ -187,12 +180,15 @@ def _section(
         cap=check.cap(end, row) if at_end and not v["counts"][row, column] else None,
         bearing=support if at_end and bottom and at_bearing(support) else None,
         values=_values(check, row, column),
-        use={
-            "strength": float(check.strength[row, column]),
-            "spacing": float(check.spacing[row, column]),
-            **{n: float(check.bars[n][row, column]) for n in ("tension", "compression", "bearing")},
-        },
+        use=_use(check, row, column),
     )
+
+
+def _use(check: SpanCheck, row: int, column: int) -> dict[str, float]:
+    """Return how far the section uses strength, spacing and its bars: demand over resistance."""
+    shares = {"strength": check.strength, "spacing": check.spacing}
+    shares |= {name: check.bars[name] for name in ("tension", "compression", "bearing")}
+    return {name: float(share[row, column]) for name, share in shares.items()}
 
 
 def _area(A_s: float) -> float:
