@@ -17,6 +17,7 @@ FREE = ("errors", "resources")
 FACADE = ("__init__", "__main__")
 """What stands above all rooms: the names a notebook uses, and ``python -m lineproof``."""
 MODULES = sorted(PACKAGE.rglob("*.py"))
+TEST_FILES = {path.name for path in Path(__file__).parent.rglob("test_*.py")}
 
 
 def module_name(path: Path) -> str:
@@ -125,3 +126,15 @@ def test_the_order_itself() -> None:
     assert not allowed("errors", "quantity")
     assert not allowed("quantity", "__init__")
     assert allowed("cli", "resources")
+
+
+def test_no_test_module_is_imported_by_another() -> None:
+    """What several of them use stands in a plain module: else its tests and fixtures leak."""
+    found = []
+    for path in Path(__file__).parent.rglob("*.py"):
+        for node in ast.walk(ast.parse(path.read_text(encoding="utf-8"))):
+            if isinstance(node, ast.ImportFrom):
+                names = [*(node.module or "").split("."), *(alias.name for alias in node.names)]
+                files = (f"{name}.py" for name in names if name.startswith("test_"))
+                found += [(path.name, name) for name in files if name in TEST_FILES]
+    assert found == []

@@ -8,7 +8,7 @@ import re
 
 import pytest
 from tests.audit.hand import beam
-from tests.beams import gallery, test_section_study
+from tests.beams import gallery, tee_study
 from tests.beams.continuous import flow
 
 from lineproof.audit.claims.blank import HEADINGS, blank_table, quick_lines
@@ -54,7 +54,7 @@ def test_a_single_span_is_asked_for_some_twenty_inputs() -> None:
 
 
 def test_a_section_study_and_lines_of_ones_own() -> None:
-    study = quick_lines(Graph(test_section_study.study()))
+    study = quick_lines(Graph(tee_study.study()))
     assert {"given/b_f", "bars/A_s", "bars/d", "flexure/M_r", "section/M_cr"} <= set(study)
     own = quick_lines(Graph(beam()))
     assert {"given/b", "given/w_f", "beam/d", "beam/A_s", "strength/M_r"} <= set(own)

@@ -10,6 +10,7 @@ from hypothesis import strategies as st
 
 from lineproof.beams import FloorBeam
 from lineproof.errors import UserError
+from lineproof.record import Record
 
 from .gallery import CALLS, RECTANGULAR, record_of, run, start
 
@@ -17,7 +18,12 @@ orders = settings(
     max_examples=25, deadline=None, derandomize=True, database=None,
     suppress_health_check=list(HealthCheck),
 )  # fmt: skip
-STRAIGHT = record_of()
+
+
+@pytest.fixture(scope="module")
+def straight() -> Record:
+    """The record of the calls made once in their order."""
+    return record_of()
 
 
 @st.composite
@@ -29,7 +35,7 @@ def call_orders(draw: st.DrawFn) -> list[str]:
 
 @orders
 @given(calls=call_orders())
-def test_any_order(calls: list[str]) -> None:
+def test_any_order(straight: Record, calls: list[str]) -> None:
     """A call too early says which call to run first; closing gives the same lines or refuses."""
     beam = start()
     assert all("run beam." in refusal for refusal in refusals(beam, calls))
@@ -38,7 +44,7 @@ def test_any_order(calls: list[str]) -> None:
     except UserError as error:
         faults = error.faults
     else:
-        assert record.digest == STRAIGHT.digest
+        assert record.digest == straight.digest
         return
     assert all("run " in fault for fault in faults)
 
@@ -56,22 +62,22 @@ def refusals(beam: FloorBeam, calls: Iterable[str]) -> list[str]:
 
 @orders
 @given(calls=call_orders())
-def test_any_order_then_straight(calls: list[str]) -> None:
+def test_any_order_then_straight(straight: Record, calls: list[str]) -> None:
     """After the cells have been run in order once more, nothing is left of the disorder."""
     beam = start()
     assert all("run beam." in refusal for refusal in refusals(beam, calls))
     run(beam)
-    assert beam.sheet.close().digest == STRAIGHT.digest
+    assert beam.sheet.close().digest == straight.digest
 
 
 @orders
 @given(extra=st.lists(st.integers(0, len(CALLS) - 1), max_size=10))
-def test_straight_order_with_repeats(extra: list[int]) -> None:
+def test_straight_order_with_repeats(straight: Record, extra: list[int]) -> None:
     """Cells run again after the straight order change nothing."""
     beam = start()
     run(beam, CALLS)
     run(beam, [CALLS[i] for i in extra])
-    assert beam.sheet.close().digest == STRAIGHT.digest
+    assert beam.sheet.close().digest == straight.digest
 
 
 @pytest.mark.parametrize("call", CALLS)
@@ -95,12 +101,12 @@ def test_inputs_changed_between_two_runs() -> None:
     assert again.sheet.close().digest == record_of(span="7 m").digest
 
 
-def test_the_same_inputs_again_change_nothing() -> None:
+def test_the_same_inputs_again_change_nothing(straight: Record) -> None:
     """The cell of the inputs run again, nothing else: the record stands."""
     beam = start()
     run(beam)
     start(sheet=beam.sheet)
-    assert beam.sheet.close().digest == STRAIGHT.digest
+    assert beam.sheet.close().digest == straight.digest
 
 
 def test_shape_changed_on_the_same_sheet() -> None:

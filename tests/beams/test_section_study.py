@@ -13,23 +13,9 @@ from lineproof.sheet import Sheet
 
 from .gallery import PROJECT_2015, holds, number
 from .pocket import faults
+from .tee_study import TEE, study
 
-CALLS = ("cracking", "bars", "balanced", "resistance", "second_path", "capacity")
-# independent check no. 5b as a whole section: b 900, h_f 100, b_w 300, f'c 35
-TEE: dict[str, Any] = {
-    "b_f": "900 mm", "h_f": "100 mm", "b_w": "300 mm", "h": "665 mm", "f_c": "35 MPa",
-    "grade": "400R", "bars": "3-30M / 3-30M", "cover": "40 mm",
-}  # fmt: skip
 BLOCK = 0.7975 * 0.65 * 35  # 18.143125 MPa
-
-
-def study(**changes: Any) -> Record:
-    """Return the record of the whole study with some inputs changed."""
-    sheet = Sheet("T1", "Tee section", project=PROJECT_2015)
-    made = beams.section_study(sheet, **(TEE | changes))
-    for call in CALLS:
-        getattr(made, call)()
-    return sheet.close()
 
 
 def by_hand(A_s: float, d: float, *, b: float = 900, b_w: float = 300, h_f: float = 100) -> float:

@@ -10,22 +10,15 @@ from typing import Any
 
 import pytest
 
-from lineproof import Sheet, beams
 from lineproof.notebook.read import read_calc
 from lineproof.package import build_package, to_html, to_pdf
-from lineproof.record.record import Record
-from lineproof.resources import folder
 
-CALCS = folder("calcs")
+from .many_spans import CALCS, CHAPTERS, before_chapters, recorded, whole
+
 DEMO = CALCS / "floor-beam.ipynb"
-LENGTHS = ("7.6 m", "9.2 m", "7.6 m")
 SPANS = (1, 3, 6, 12, 24)
 FEW_ROUNDS = 12
 """Spans from which on one round is enough to see the growth."""
-CHAPTERS = (
-    "loads", "spans", "analysis", "flexure", "shear", "deflections", "anchorage", "schedule",
-    "summary",
-)  # fmt: skip
 MEMORY_GOAL = 300
 """Peak memory of the design of three spans with its record and its package, MB."""
 PEAK = """
@@ -40,7 +33,7 @@ def peak():
     most = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss
     return most / 1024 ** (2 if sys.platform == "darwin" else 1)
 
-from {module} import whole
+from many_spans import whole
 assert whole(3).data["parts"]
 print(peak())
 from lineproof.notebook.read import read_calc
@@ -51,33 +44,6 @@ assert to_pdf(package).startswith(b"%PDF")
 assert to_html(package).startswith("<!DOCTYPE html>")
 print(peak())
 """
-
-
-def before_chapters(spans: int) -> tuple[Sheet, Any]:
-    """Return the gallery floor beam with so many spans, its inputs read."""
-    sheet = Sheet.open("B7", project=CALCS / "project.toml")
-    beam = beams.continuous_beam(
-        sheet,
-        spans=[LENGTHS[n % 3] for n in range(spans)],
-        supports=["girder 400 mm", *["column 450 mm"] * (spans - 1), "girder 400 mm"],
-        h="620 mm", b_w="380 mm", h_f="140 mm", spacing="3.1 m", f_c="32 MPa", grade="400R",
-        superimposed="1.8 kPa", use="assembly area", exposure="N", fire_rating="2 h",
-        cover="30 mm", slab_bars="2 x 10M at 300 mm",
-    )  # fmt: skip
-    return sheet, beam
-
-
-def recorded(spans: int) -> Sheet:
-    """Go through all chapters of a beam, the sheet still open."""
-    sheet, beam = before_chapters(spans)
-    for chapter in CHAPTERS:
-        getattr(beam, chapter)()
-    return sheet
-
-
-def whole(spans: int) -> Record:
-    """Design and record a beam, the record closed and its printed strings fixed."""
-    return recorded(spans).close()
 
 
 @pytest.mark.benchmark(group="three spans, step by step")
@@ -141,7 +107,7 @@ def test_package_html(benchmark: Callable[..., Any]) -> None:
 @pytest.mark.benchmark(group="peak memory of design and record, then of the package")
 def test_peak_memory(benchmark: Callable[..., Any]) -> None:
     """Design and record, then PDF and HTML, in one fresh process; peaks stand beside the time."""
-    program = PEAK.format(module=Path(__file__).stem, demo=str(DEMO))
+    program = PEAK.format(demo=str(DEMO))
 
     def run() -> str:
         return subprocess.run(

@@ -11,7 +11,7 @@ import pytest
 from lineproof.audit.graph import Graph
 from lineproof.record import Record, recompute
 
-from .test_continuous import whole
+from .many_spans import whole
 
 SPANS, LINES = 8, 4900
 """A beam of so many spans has at least so many lines."""

@@ -15,8 +15,8 @@ from lineproof.beams.continuous.cures_sought import cures_of
 from lineproof.beams.steps import Steps
 from lineproof.sheet import Sheet
 
+from .cures_told import FLEXURE, check, lighter, note, sheet_of, told
 from .flow import run, start
-from .test_cures_flow import FLEXURE, check, lighter, note, sheet_of, told
 
 THROUGH = (*FLEXURE, "deflections")
 TIP: Mapping[str, Any] = {

@@ -6,9 +6,7 @@ the beam weighs more, since the cure is told with the loads as they are.
 
 from __future__ import annotations
 
-import re
 from collections.abc import Mapping
-from pathlib import Path
 from typing import Any
 
 import pytest
@@ -20,69 +18,26 @@ from lineproof.beams.continuous.cures_flow import NOT_SOUGHT
 from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, bound_names
 from lineproof.beams.continuous.cures_tried import failing
 from lineproof.errors import UserError
-from lineproof.record import Entry
 from lineproof.record.entry import CHECK
 from lineproof.record.printing import utilisation
 from lineproof.sheet import Sheet
 
-from .flow import CALLS, PROJECT, run, start
-from .test_edge_beam import inputs_of
+from .cures_told import FLEXURE, check, lighter, note, sheet_of, told
+from .flow import CALLS, PROJECT, run
+from .notebooks import EXISTING_BEAM, inputs_of
 
-NOTEBOOK = Path(__file__).parents[3] / "calcs" / "existing-beam.ipynb"
-SPACING = 3.1
-"""Centre to centre of the beams [m]."""
-WEIGHT = 24.0
-"""Of reinforced concrete of normal density, as the beam takes it [kN/m3]."""
 THROUGH = tuple(CALLS[: CALLS.index("anchorage") + 1])
-
-
-def sheet_of(calls: tuple[str, ...] = CALLS, **inputs: Any) -> Sheet:
-    """Return the sheet of the three spans with some inputs changed."""
-    return run(start(**inputs), calls)
 
 
 def existing(calls: tuple[str, ...] = CALLS, **changes: Any) -> Sheet:
     """Return the sheet of the existing beam of the notebook with some inputs changed."""
     sheet = Sheet("B3", "Existing beam", project=PROJECT)
-    return run(beams.continuous_beam(sheet, **(inputs_of(NOTEBOOK) | changes)), calls)
-
-
-def note(sheet: Sheet, part: str, key: str = "") -> str:
-    """Return the text of the one cure of a part, or of that of one check."""
-    entries = sheet.entries_of(part).items()
-    (text,) = [e.source.text for s, e in entries if s.startswith(f"cure-{key}")]
-    return str(text)
-
-
-def told(text: str, pattern: str) -> float:
-    """Return a number told in a cure."""
-    match = re.search(pattern, text)
-    assert match is not None, text
-    return float(match[1])
-
-
-def check(sheet: Sheet, entry: str) -> Entry:
-    """Return a recorded check."""
-    return sheet.entry(entry)
-
-
-def lighter(**sizes: float) -> dict[str, str]:
-    """Return inputs with another depth or width [mm], the whole dead load as it was.
-
-    The web below the slab weighs more; the moments are compared where it matters.
-    """
-    before = {"h": sizes.pop("h_before", 620.0), "b_w": 380.0}
-    after = before | sizes
-    below = [(at["h"] - 140.0) * at["b_w"] / 1e6 for at in (before, after)]
-    more = (below[1] - below[0]) * WEIGHT
-    made = {name: f"{value:g} mm" for name, value in sizes.items()}
-    return made | {"superimposed": f"{1.8 - more / SPACING:.9f} kPa"}
+    return run(beams.continuous_beam(sheet, **(inputs_of(EXISTING_BEAM) | changes)), calls)
 
 
 # -- flexure ---------------------------------------------------------------------------------
 
 WEAK: Mapping[str, Any] = {"bottom_bars": ["3-20M", "5-20M", "5-20M"]}
-FLEXURE = ("loads", "spans", "analysis", "flexure")
 
 
 def test_more_bars_as_told_hold_in_the_flow() -> None:
@@ -221,7 +176,7 @@ def test_steel_told_for_the_tension_side_is_that_of_the_face_in_tension() -> Non
     text = note(asked, "shear-1-right")
     bars = [
         run | ({"bars": "2-20M"} if run["bars"] == "1-20M" else {})
-        for run in inputs_of(NOTEBOOK)["bar_runs"]
+        for run in inputs_of(EXISTING_BEAM)["bar_runs"]
     ]
     again = existing((*FLEXURE, "shear"), bar_runs=bars)
 
@@ -256,7 +211,7 @@ def test_the_depth_told_for_a_deflection_holds_in_the_flow() -> None:
 
 def test_bars_too_short_are_told_by_how_much() -> None:
     """Top bars that end 506 mm past their point shall end 829 mm past it: 330 mm longer do."""
-    runs = inputs_of(NOTEBOOK)["bar_runs"]
+    runs = inputs_of(EXISTING_BEAM)["bar_runs"]
     short = existing(THROUGH)
     part = "anchorage-top-2-left-cut-1"
     needed, provided = check(short, f"{part}/cut-extension").value

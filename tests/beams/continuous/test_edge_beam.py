@@ -2,84 +2,29 @@
 
 from __future__ import annotations
 
-import ast
-import json
 import math
 from collections import Counter
 from decimal import ROUND_HALF_UP, Decimal
-from pathlib import Path
-from typing import Any
 
 import numpy as np
 import pytest
 
-from lineproof import beams
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.beams.continuous.resistance_demand import end_tension, end_torsion
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.errors import UserError
-from lineproof.record import Entry, Record, recompute
-from lineproof.sheet import Sheet
+from lineproof.record import recompute
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
-from .flow import MIXED, PROJECT, start
-
-NOTEBOOK = Path(__file__).parents[3] / "calcs" / "edge-beam.ipynb"
-CALLS = (
-    "loads", "spans", "analysis", "flexure", "shear", "deflections", "anchorage", "schedule",
-    "summary",
-)  # fmt: skip
-TURNED: dict[str, Any] = {
-    "torques": {"D": "15 kN.m"}, "torsion": "equilibrium", "closed_stirrups": True,
-}  # fmt: skip
-
-
-def inputs_of(notebook: Path) -> dict[str, Any]:
-    """Return the inputs that the cell to be edited sets."""
-    cells = json.loads(notebook.read_text())["cells"]
-    sources = ("".join(cell["source"]) for cell in cells)
-    cell = next(text for text in sources if text.startswith("# Edit here"))
-    made = {}
-    for statement in ast.parse(cell).body:
-        assert isinstance(statement, ast.Assign)
-        (target,) = statement.targets
-        assert isinstance(target, ast.Name)
-        made[target.id] = ast.literal_eval(statement.value)
-    return made
-
-
-def make(beam: beams.ContinuousBeam) -> tuple[beams.ContinuousBeam, Design, Record]:
-    """Return a beam with all its chapters recorded, its design and its record."""
-    for call in CALLS:
-        getattr(beam, call)()
-    return beam, beam.design, beam.sheet.close()
-
-
-def edge(**changes: Any) -> beams.ContinuousBeam:
-    """Start the beam of the notebook with some inputs changed."""
-    sheet = Sheet("B12", "Edge beam", project=PROJECT)
-    return beams.continuous_beam(sheet, **(inputs_of(NOTEBOOK) | changes))
+from .edge_beam import TURNED, Edge, edge, failing, make
+from .flow import CALLS, MIXED, start
 
 
 @pytest.fixture(scope="module")
-def edge_beam() -> tuple[beams.ContinuousBeam, Design, Record]:
-    return make(edge())
-
-
-@pytest.fixture(scope="module")
-def three_spans() -> tuple[beams.ContinuousBeam, Design, Record]:
+def three_spans() -> Edge:
     """The three-span beam with 15 kN.m per metre of torsion that equilibrium needs."""
     return make(start(**TURNED))
-
-
-def failing(sheet: Sheet) -> list[str]:
-    """Return the checks that do not hold."""
-    return [e.id for part in sheet.parts for e in part.entries.values() if _fails(e)]
-
-
-def _fails(entry: Entry) -> bool:
-    return entry.kind == "check" and not entry
 
 
 def turned_sections(design: Design) -> list[ShearSection]:
@@ -131,7 +76,7 @@ def test_bars_carry_torsion_at_every_station(name: str, request: pytest.FixtureR
 
 
 def test_force_in_the_bars_with_torsion_by_hand(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """Span 1 at 2.525 m from support 1, 5-15M below, 10M closed at 175 mm, 1.25 D + 1.5 L.
 
@@ -172,7 +117,7 @@ def test_force_in_the_bars_with_torsion_by_hand(
 
 
 def test_inside_a_support_the_moment_of_its_face_counts(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """The top bars are used most inside support 2: M_f there is the larger of both faces."""
     beam, design, _ = edge_beam
@@ -185,7 +130,7 @@ def test_inside_a_support_the_moment_of_its_face_counts(
 
 
 def test_bottom_bars_run_through_and_no_fewer_do(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """All bottom bars run into both supports; one bar less in span 1 does not carry torsion."""
     beam, design, _ = edge_beam
@@ -218,9 +163,7 @@ def test_given_bars_stay_and_fail() -> None:
 
 
 @pytest.mark.parametrize("support", [1, 4])
-def test_torsion_at_the_bearing(
-    three_spans: tuple[beams.ContinuousBeam, Design, Record], support: int
-) -> None:
+def test_torsion_at_the_bearing(three_spans: Edge, support: int) -> None:
     """F_le at an end support, by hand from V_f, V_s, theta and T_f of its part (11.3.10.6).
 
     T_f at the face is 1.25 x 15 x l_n/2 = 18.75 x 3.5875 = 67.27 kN.m, or 0.9 D or 1.4 D of it.
@@ -263,7 +206,7 @@ def test_open_stirrups_are_refused_with_what_to_write() -> None:
 
 
 def test_summary_has_a_row_of_torsion_for_every_section(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """T_cr = 235 600^2/2000 x 0.38 x 0.65 x sqrt(32)/1e6 = 38.78 kN.m, its quarter 9.69 kN.m."""
     _, design, record = edge_beam
@@ -282,7 +225,7 @@ def test_summary_has_a_row_of_torsion_for_every_section(
     [("flexure", 2, 6), ("shear", 3, 6), ("service", 2, 3)],
 )
 def test_ratios_of_the_summary_are_those_of_its_columns(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
     table: str,
     demand: int,
     resistance: int,
@@ -297,7 +240,7 @@ def test_ratios_of_the_summary_are_those_of_its_columns(
 
 
 def test_one_quantity_prints_with_the_same_digits_everywhere(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """At its own line and in every line that uses it, also in one printed before it.
 
@@ -324,7 +267,7 @@ def _figures(text: str) -> tuple[int, ...]:
 
 
 def test_slopes_are_told_with_what_they_are_times_and_every_number_has_its_unit(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """With I in mm4 below the line, sums of moment times length over I are slopes times E: kPa."""
     record = edge_beam[2]
@@ -340,7 +283,7 @@ def test_slopes_are_told_with_what_they_are_times_and_every_number_has_its_unit(
 
 
 def test_torques_per_length_carry_their_unit_and_where_they_come_from(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """5.5 and 5 kN.m per metre: 1.25 x 5.5 + 1.5 x 5 = 14.375 kN.m/m."""
     given = edge_beam[2].entries["torsion-1/t_D"]
@@ -352,7 +295,7 @@ def test_torques_per_length_carry_their_unit_and_where_they_come_from(
 
 
 def test_symbols_that_are_apart_have_words_apart(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """On the notation page each meaning stands once."""
     words = Counter(symbol["meaning"] for symbol in edge_beam[2].data["notation"])
@@ -360,7 +303,7 @@ def test_symbols_that_are_apart_have_words_apart(
 
 
 def test_a_reaction_that_is_not_sought_is_a_dash(
-    edge_beam: tuple[beams.ContinuousBeam, Design, Record],
+    edge_beam: Edge,
 ) -> None:
     """A cell left empty would read as forgotten; the middle support has no least live load."""
     table = edge_beam[2].entries["summary/reactions"]

@@ -20,17 +20,16 @@ orders = settings(
     max_examples=8, deadline=None, derandomize=True, database=None,
     phases=[Phase.explicit, Phase.generate], suppress_health_check=list(HealthCheck),
 )  # fmt: skip
-STRAIGHT = record_of()
 TORSION = {
     "shape": "L", "tributary_width": "1.7 m", "closed_stirrups": True,
     "torques": {"D": "1.4 kN.m", "L": "0.9 kN.m"},
 }  # fmt: skip
 
 
-def test_every_check_of_the_three_spans_holds() -> None:
+def test_every_check_of_the_three_spans_holds(floor: Record) -> None:
     """Bars and stirrups chosen pass every check; the chapters have them all."""
-    assert STRAIGHT.failed == []
-    checks = [e for e in STRAIGHT.entries.values() if e["kind"] == "check"]
+    assert floor.failed == []
+    checks = [e for e in floor.entries.values() if e["kind"] == "check"]
     parts = {check["id"].partition("/")[0] for check in checks}
     wanted = {f"{what}-{k}" for k in (1, 2, 3) for what in ("sag", "deflection")}
     wanted |= {f"{what}-{k}-{side}" for what in ("shear",) for k in (1, 2, 3)
@@ -85,25 +84,25 @@ def call_orders(draw: st.DrawFn) -> list[str]:
 
 @orders
 @given(calls=call_orders())
-def test_any_order(calls: list[str]) -> None:
+def test_any_order(floor: Record, calls: list[str]) -> None:
     """A call too early says which call to run first; closing gives the same lines or refuses."""
     beam = start()
     said = refusals(beam, calls)
     assert [text for text in said if "run beam." not in text] == []
     assert [text for text in unclosed(beam) if "run " not in text] == []
     if not unclosed(beam):
-        assert beam.sheet.close().digest == STRAIGHT.digest
+        assert beam.sheet.close().digest == floor.digest
     run(beam)
-    assert beam.sheet.close().digest == STRAIGHT.digest
+    assert beam.sheet.close().digest == floor.digest
 
 
 @orders
 @given(extra=st.lists(st.sampled_from(CALLS), max_size=8))
-def test_cells_run_again_change_nothing(extra: list[str]) -> None:
+def test_cells_run_again_change_nothing(floor: Record, extra: list[str]) -> None:
     beam = start()
     run(beam)
     run(beam, extra)
-    assert beam.sheet.close().digest == STRAIGHT.digest
+    assert beam.sheet.close().digest == floor.digest
 
 
 @pytest.mark.parametrize("left_out", CALLS)
@@ -125,12 +124,12 @@ def test_a_call_alone_names_what_to_run(call: str) -> None:
     assert len(caught.value.faults) >= 7
 
 
-def test_the_same_inputs_again_change_nothing() -> None:
+def test_the_same_inputs_again_change_nothing(floor: Record) -> None:
     """The cell of the inputs run again, nothing else: the record stands."""
     beam = start()
     run(beam)
     start(sheet=beam.sheet)
-    assert beam.sheet.close().digest == STRAIGHT.digest
+    assert beam.sheet.close().digest == floor.digest
 
 
 @pytest.mark.parametrize(

@@ -6,7 +6,6 @@ The beam is that of ``test_gaps``.
 from __future__ import annotations
 
 import re
-from pathlib import Path
 from typing import Any
 
 import pytest
@@ -16,9 +15,7 @@ from lineproof.beams.continuous.cures_tried import failing, failing_of
 from lineproof.beams.continuous.resistance_cover import Gap
 from lineproof.sheet import Sheet
 
-from .flow import CALLS, run, start
-from .test_edge_beam import inputs_of
-from .test_gaps import (
+from .beam_with_gaps import (
     BESIDE,
     D_TOP,
     EXISTING,
@@ -28,6 +25,7 @@ from .test_gaps import (
     OVER,
     RIGHT,
     RUNS,
+    Existing,
     Row,
     built,
     cure,
@@ -35,18 +33,10 @@ from .test_gaps import (
     row,
     swapped,
 )
+from .flow import CALLS, run, start
+from .notebooks import EXISTING_BEAM, inputs_of
 
-NOTEBOOK = Path(__file__).parents[3] / "calcs" / "existing-beam.ipynb"
 AXIS = "m from the axis of support 1"
-
-
-@pytest.fixture(scope="module")
-def existing() -> tuple[beams.ContinuousBeam, Sheet]:
-    """The beam with gaps and its sheet."""
-    return built()
-
-
-Existing = tuple[beams.ContinuousBeam, Sheet]
 
 
 @pytest.fixture(scope="module")
@@ -145,7 +135,7 @@ def test_a_told_cure_closes_its_gap_and_fails_nothing_else(
     existing: Existing, parts: tuple[str, ...], words: str, good: list[Row], less: list[Row]
 ) -> None:
     """Typed in and calculated anew through all calls; with a step less something does not hold."""
-    beam, sheet = existing
+    beam, sheet, _ = existing
     assert all(words in cure(sheet, part) for part in parts)
     assert cured(beam, sheet, parts[0], good)
     assert not cured(beam, sheet, parts[0], less)
@@ -220,7 +210,7 @@ def test_further_bars_as_long_as_those_beside_them_where_shorter_ones_fail_elsew
     words = f"further bars 2-20M from 3.15 to 11.25 {AXIS}"
     for part in ("coverage-top", "coverage-top-tension", "coverage-gap-2"):
         assert words in cure(asked, part)
-    given = inputs_of(NOTEBOOK)["bar_runs"]
+    given = inputs_of(EXISTING_BEAM)["bar_runs"]
     with_it = note_beam(bar_runs=[*given, row("top", "2-20M", 3.15, 11.25)])
     assert failing_of(with_it.parts) < failing_of(asked.parts)
     assert not [part.key for part in with_it.parts if part.key.startswith("coverage-gap")]
@@ -232,7 +222,7 @@ def test_further_bars_as_long_as_those_beside_them_where_shorter_ones_fail_elsew
 
 def note_beam(**changes: Any) -> Sheet:
     """The existing beam of the notebook, with other inputs."""
-    return run(start(**(inputs_of(NOTEBOOK) | changes)))
+    return run(start(**(inputs_of(EXISTING_BEAM) | changes)))
 
 
 def test_every_check_that_is_solved_apart_gets_its_cure() -> None:

@@ -19,8 +19,8 @@ import pytest
 from lineproof.beams.continuous.cures_gaps import metres
 from lineproof.sheet import Sheet
 
+from .beam_with_gaps import EXISTING, cure, gaps_of, row
 from .flow import CALLS, run, start
-from .test_gaps import EXISTING, cure, gaps_of, row
 
 BEAM: dict[str, Any] = EXISTING | {
     "spans": ["8.7 m"], "supports": ["column 400 mm"] * 2, "h": "700 mm", "b_w": "350 mm",

@@ -11,8 +11,8 @@ from lineproof.beams.continuous.service import record_at
 from lineproof.beams.steps import Steps
 from lineproof.record.recompute import recompute
 
+from .beam_with_gaps import EXISTING, built, row
 from .flow import analysed
-from .test_gaps import EXISTING, built, row
 
 
 def test_loads_that_deflect_another_span_crack_this_one_too() -> None:

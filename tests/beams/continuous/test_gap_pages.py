@@ -18,10 +18,9 @@ from lineproof.beams.continuous.figure_elevation_gaps import Short
 from lineproof.beams.continuous.figure_elevation_view import view
 from lineproof.package import build_package
 
+from .beam_with_gaps import EXISTING, RUNS, Existing
 from .flow import CALLS, run, start
-from .test_gaps import EXISTING, RUNS, Existing, existing
 
-__all__ = ["existing"]
 GAPS = [
     "Gap in the bottom bars, span 1, 1.77 to 3.54 m from its left axis",
     "Gap in the top bars, span 1, 4.25 to 6.00 m from its left axis",

@@ -19,7 +19,7 @@ from lineproof.record.entry import CHECK
 from lineproof.record.recompute import recompute
 
 from .flow import run, start
-from .test_flow_cut_bars import Walk, resistance, uncovered
+from .walk import Walk, resistance, uncovered
 
 SPANS = ([7.0], [6.0, 6.0], [7.6, 9.2, 7.6], [2.0, 7.0], [9.0, 3.0, 9.0], [2.0, 7.0, 8.0])
 KINDS = ("wall 300 mm", "column 400 mm", "girder 400 mm")

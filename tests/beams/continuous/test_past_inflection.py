@@ -6,8 +6,8 @@ import pytest
 
 from lineproof import beams
 
-from .flow import start
-from .test_edge_beam import CALLS, edge, failing
+from .edge_beam import edge, failing
+from .flow import CALLS, start
 
 
 def made(beam: beams.ContinuousBeam) -> beams.ContinuousBeam:

@@ -6,23 +6,14 @@ from typing import Any
 
 import pytest
 
-from lineproof import beams
 from lineproof.record import Record
-from lineproof.sheet import Sheet
 
-from .flow import PROJECT, record_of
-from .test_edge_beam import NOTEBOOK, inputs_of, make
+from .edge_beam import Edge
 
 
 @pytest.fixture(scope="module")
-def floor() -> Record:
-    return record_of()
-
-
-@pytest.fixture(scope="module")
-def edge() -> Record:
-    sheet = Sheet("B12", "Edge beam", project=PROJECT)
-    return make(beams.continuous_beam(sheet, **inputs_of(NOTEBOOK)))[2]
+def edge(edge_beam: Edge) -> Record:
+    return edge_beam[2]
 
 
 def table(record: Record, key: str) -> list[dict[str, str]]:

@@ -17,22 +17,14 @@ from lineproof.beams.continuous.resistance import stand
 from lineproof.beams.continuous.resistance_torsion import worst_turned
 from lineproof.record import Entry
 
-from .flow import start
+from .edge_beam import TURNED, Edge, failing
+from .flow import CALLS, start
 from .laid import beam_of
-from .test_edge_beam import CALLS, TURNED, edge, failing
 
 TURN = 1.25 * 5.5 + 1.5 * 5.0
 """Torque per length of 1.25 D + 1.5 L [kN.m/m]."""
 P_H, A_O = 2 * (288.7 + 528.7), 0.85 * 288.7 * 528.7
 """Perimeter [mm] and area [mm2] of the shear flow of 380 x 620 with 10M at 40 mm of cover."""
-
-
-@pytest.fixture(scope="module")
-def edge_beam() -> beams.ContinuousBeam:
-    beam = edge()
-    for call in CALLS[:-2]:
-        getattr(beam, call)()
-    return beam
 
 
 def force(design: Design, span: int, x: float, A_s: float) -> float:
@@ -55,18 +47,18 @@ def force(design: Design, span: int, x: float, A_s: float) -> float:
     return M / d_v + math.hypot(V / 2, 0.45 * P_H * T / (2 * A_O)) * cot
 
 
-def test_worst_station_of_the_tension_counts_torsion(edge_beam: beams.ContinuousBeam) -> None:
+def test_worst_station_of_the_tension_counts_torsion(edge_beam: Edge) -> None:
     """Bottom bars of span 1 at 2.525 m: 328.8 kN with torsion (by hand in test_edge_beam) of 340.
 
     Without torsion the most used station would be one of span 2 with 0.771.
     """
-    entries = edge_beam.sheet.entries_of("coverage-bottom-tension")
+    entries = edge_beam[0].sheet.entries_of("coverage-bottom-tension")
     check = entries["bars-tension-side"]
-    F = force(edge_beam.design, 1, 2525, 1000)
+    F = force(edge_beam[0].design, 1, 2525, 1000)
     assert pytest.approx(328.8e3, abs=50) == F
     assert check.value == (pytest.approx(F, rel=1e-9), pytest.approx(5 * 200 * 340))
     assert "2525 mm from the near support axis" in entries["place"].source.text
-    worst = max(e.value[0] / e.value[1] for e in turned_checks(edge_beam))
+    worst = max(e.value[0] / e.value[1] for e in turned_checks(edge_beam[0]))
     assert worst == pytest.approx(F / 340e3)
 
 
@@ -82,20 +74,20 @@ def turned_checks(beam: beams.ContinuousBeam) -> list[Entry]:
     ]
 
 
-def test_table_of_the_bars_counts_torsion(edge_beam: beams.ContinuousBeam) -> None:
+def test_table_of_the_bars_counts_torsion(edge_beam: Edge) -> None:
     """Span 1, 2.370 m: all five bars developed, and torsion on the straight line of 50 mm."""
-    rows = edge_beam.sheet.entry("coverage/stations").source.content["rows"]
+    rows = edge_beam[0].sheet.entry("coverage/stations").source.content["rows"]
     (row,) = [row for row in rows if list(row[:2]) == ["1", "2.370"]]
     x = 2370.0
-    F = [force(edge_beam.design, 1, at, 1000) for at in (2325.0, 2375.0)]
+    F = [force(edge_beam[0].design, 1, at, 1000) for at in (2325.0, 2375.0)]
     between = F[0] + (F[1] - F[0]) * (x - 2325) / 50
     assert float(row[4]) == pytest.approx(between / 340e3, abs=0.005)
-    assert "tension of 11.3.10.6" in edge_beam.sheet.entry("coverage/method").source.text
+    assert "tension of 11.3.10.6" in edge_beam[0].sheet.entry("coverage/method").source.text
 
 
-def test_no_shift_stands_for_shear_where_torsion_counts(edge_beam: beams.ContinuousBeam) -> None:
+def test_no_shift_stands_for_shear_where_torsion_counts(edge_beam: Edge) -> None:
     """l_e of the bars cut over support 2 is d = 560.7 mm, not d_v cot theta (11.3.9.2)."""
-    entries = edge_beam.sheet.entries_of("anchorage-top-2-left-cut-1")
+    entries = edge_beam[0].sheet.entries_of("anchorage-top-2-left-cut-1")
     assert entries["l_e"].value == pytest.approx(560.7)
     assert "theta" not in entries
     assert "Torsion counts in this span" in entries["no-shift"].source.text
@@ -115,10 +107,10 @@ def test_bars_of_which_torsion_asks_too_much_fail_along_the_beam() -> None:
 
 
 def test_bars_lapped_far_away_count_by_their_development_length(
-    edge_beam: beams.ContinuousBeam,
+    edge_beam: Edge,
 ) -> None:
     """At the largest moment of span 2, 4.2 m from a lap, l_d makes the bars whole, not l_s."""
-    A_sd = edge_beam.sheet.entries_of("coverage-bottom")["A_sd"]
+    A_sd = edge_beam[0].sheet.entries_of("coverage-bottom")["A_sd"]
     assert {e.symbol for e in A_sd.args if e.symbol.startswith("l_")} == {"l_av", "l_d"}
 
 

@@ -15,27 +15,16 @@ from lineproof.errors import UserError
 from lineproof.record.recompute import recompute
 from lineproof.sheet import Sheet
 
-from .flow import CALLS, run, start
-from .test_edge_beam import inputs_of
-from .test_gap_cures import NOTEBOOK
-from .test_gaps import Row, row
+from .beam_with_gaps import row
+from .flow import run, start
+from .notebooks import EXISTING_BEAM, inputs_of
+from .two_sizes import D_20, D_25, FLEXURE, INSIDE, SPREAD, TOP, beam
 
-INSIDE = 30 + 11.3
-D_20, D_25 = 600 - INSIDE - 19.5 / 2, 600 - INSIDE - 25.2 / 2
-"""Depth of a first layer of 20M, of 25M."""
 BOTTOM = [
     row("bottom", "2-25M", -0.1, 7.6), row("bottom", "2-20M", -0.1, 7.6),
     row("bottom", "2-20M", -0.1, 6.0, layer=2),
     row("bottom", "2-25M", 6.45, 14.5), row("bottom", "2-20M", 6.8, 14.5),
 ]  # fmt: skip
-TOP = [row("top", "2-25M", -0.1, 14.5), row("top", "1-20M", 5.2, 9.2)]
-SPREAD = row("top", "2-15M", 5.2, 9.2, place="overhang")
-FLEXURE = CALLS[: CALLS.index("flexure") + 1]
-
-
-def beam(runs: list[Row], calls: tuple[str, ...] = CALLS, **changes: Any) -> Sheet:
-    """The sheet of the existing beam with other bars along it."""
-    return run(start(**(inputs_of(NOTEBOOK) | {"bar_runs": runs} | changes)), calls)
 
 
 @pytest.fixture(scope="module")
@@ -190,5 +179,5 @@ def test_three_sizes_in_a_layer_are_refused_with_what_to_write() -> None:
 )
 def test_two_sizes_typed_at_once_say_how_to_give_them(changes: dict[str, Any], fault: str) -> None:
     with pytest.raises(UserError) as refused:
-        run(start(**(inputs_of(NOTEBOOK) | changes)), FLEXURE)
+        run(start(**(inputs_of(EXISTING_BEAM) | changes)), FLEXURE)
     assert fault in refused.value.faults

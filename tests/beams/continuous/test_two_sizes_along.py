@@ -21,12 +21,10 @@ from lineproof.record import Entry
 from lineproof.record.recompute import recompute
 from lineproof.sheet import Sheet
 
+from .beam_with_gaps import Row, row
 from .flow import CALLS, analysed, run, start
-from .test_edge_beam import NOTEBOOK as EDGE
-from .test_edge_beam import inputs_of
-from .test_gap_cures import NOTEBOOK as EXISTING
-from .test_gaps import Row, row
-from .test_two_sizes import D_20, D_25, FLEXURE, INSIDE, SPREAD, TOP, beam
+from .notebooks import EDGE_BEAM, EXISTING_BEAM, inputs_of
+from .two_sizes import D_20, D_25, FLEXURE, INSIDE, SPREAD, TOP, beam
 
 ALONG = (-0.1, 14.5)
 B_25, B_20 = row("bottom", "2-25M", *ALONG), row("bottom", "2-20M", *ALONG)
@@ -237,7 +235,7 @@ def test_hooks_near_the_end_of_the_beam_have_the_cover_that_is_there() -> None:
 
 def edge(runs: list[Row], calls: tuple[str, ...] = CALLS) -> Sheet:
     """The edge beam with torsion (L, 380 x 620, cover 40, two spans of 7.6 m), bars given."""
-    return run(start(**(inputs_of(EDGE) | {"bar_runs": runs})), calls)
+    return run(start(**(inputs_of(EDGE_BEAM) | {"bar_runs": runs})), calls)
 
 
 EDGE_ENDS = (-0.15, 15.35)
@@ -300,7 +298,7 @@ def test_the_section_is_drawn_as_deep_as_it_is_calculated() -> None:
     4-20M and 2-25M above, aggregate 20: 41.3 + 19.5 + 1.4*25.2 to the second layer: d_2 = 491.32,
     d = (1200*548.95 + 1000*491.32)/2200 = 522.75.
     """
-    made = analysed(**inputs_of(EXISTING))
+    made = analysed(**inputs_of(EXISTING_BEAM))
     outline = outline_of(made.sheet, made.inputs)
     thick = [BarRun("bottom", 1, 4, "20M", 0, 7000), BarRun("bottom", 2, 2, "25M", 0, 7000)]
     steel = steel_at(outline, Detailing(tuple(thick), ()), 3000, 20, "10M")
