@@ -7,7 +7,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 
 import pytest
-from hypothesis import assume, given, settings
+from hypothesis import assume, example, given, settings
 from hypothesis import strategies as st
 from scipy.integrate import quad
 from scipy.optimize import brentq
@@ -145,10 +145,14 @@ def bar_force(depth: float, area: float, f_y: float, c: float) -> float:
     areas=st.tuples(st.floats(200, 6000), st.floats(200, 6000)),
     f_y=st.sampled_from([400.0, 500.0]),
 )
+@example(Concrete("T", 250.0, 200.0, 300.0, 60.0, 20.0), (5199.0, 4338.0), 400.0)
 def test_neutral_axis_of_the_block(
     section: Concrete, areas: tuple[float, float], f_y: float
 ) -> None:
-    """Two layers, yielding or not: the package's bisection against brentq on shapely areas."""
+    """Two layers, yielding or not: the package's root against brentq on shapely areas.
+
+    With the relief of the upper layer forces balance a second time just below it in the example.
+    """
     depths = (0.92 * section.h, 0.8 * section.h)
 
     def unbalanced(c: float) -> float:

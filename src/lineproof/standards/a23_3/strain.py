@@ -33,6 +33,8 @@ PARABOLA = (
 _STEPS = 400
 _CLOSE = 1e-14
 """Part of its own size within which the axis is found."""
+_LEAST = 1e-3
+"""Depth of the axis from which on it is sought [mm]."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -114,30 +116,37 @@ def _cuts(section: Section, bottom: float) -> tuple[Floats, Floats]:
 def neutral_axis(
     strips: Strips, layers: list[Layer], steel: Steel, eps_cu: float, displaced: float = 0.0
 ) -> float:
-    """Return the depth of the neutral axis [mm] at which forces balance.
+    """Return the depth of the neutral axis [mm] at which forces balance; the least such depth.
 
-    ``displaced`` is the concrete stress taken off bars inside the compression zone [MPa].
+    ``displaced`` is the concrete stress taken off bars inside the compression zone [MPa]. With it
+    forces may balance a second time just below a layer. Raises :class:`UserError` where they
+    balance nowhere.
     """
-    low, high = 1e-3, 5 * max(layer.depth for layer in layers)
+    depths = sorted(layer.depth for layer in layers)
 
     def unbalanced(c: float) -> float:
         return _unbalanced(strips, layers, steel, eps_cu, displaced, c)
 
-    if unbalanced(high) < 0:
-        raise UserError("strain compatibility: no neutral axis inside the section; check the bars")
-    return _root(unbalanced, low, high)
+    low = _LEAST
+    for high in (*depths, 5 * depths[-1]):
+        if unbalanced(high) >= 0:
+            return _root(unbalanced, low, high)
+        low = high
+    raise UserError("strain compatibility: no neutral axis inside the section; check the bars")
 
 
 def _root(function: Callable[[float], float], low: float, high: float) -> float:
     """Return where a function that rises from below zero at ``low`` is zero.
 
-    False position with the stale end's value halved; every third step halves the interval, so that
-    it closes whatever the shape.
+    False position; the value of an end that stays twice is halved. Every fourth step halves the
+    interval, so that it closes whatever the shape.
     """
-    f_low, f_high = function(low), function(high)
+    f_low, f_high, moved = function(low), function(high), ""
     for step in range(_STEPS):
         middle = (low * f_high - high * f_low) / (f_high - f_low) if f_high != f_low else low
-        if step % 3 == 2 or not low < middle < high:
+        # Beside an end that is the root already the other one comes as near as it must.
+        middle = min(max(middle, low + _CLOSE * high / 2), high - _CLOSE * high / 2)
+        if step % 4 == 3 or not low < middle < high:
             middle = (low + high) / 2
         if middle in (low, high) or high - low <= _CLOSE * high:
             break
@@ -145,9 +154,11 @@ def _root(function: Callable[[float], float], low: float, high: float) -> float:
         if found == 0:
             return middle
         if found > 0:
-            high, f_high, f_low = middle, found, f_low / 2
+            f_low = f_low / 2 if moved == "high" else f_low
+            high, f_high, moved = middle, found, "high"
         else:
-            low, f_low, f_high = middle, found, f_high / 2
+            f_high = f_high / 2 if moved == "low" else f_high
+            low, f_low, moved = middle, found, "low"
     return (low + high) / 2
 
 
@@ -224,6 +235,7 @@ def _moment_by_block(*args: float) -> float:
     return moment(strips, layers, steel, eps_cu, _axis_by_block(*args), block)
 
 
+@lru_cache(maxsize=256)
 def _axis_by_parabola(*args: float, peak: float, strain_at_peak: float) -> float:
     phi_c, f_c, eps_cu = args[2:5]
     section, layers, steel = _case(args)
@@ -235,7 +247,7 @@ def _moment_by_parabola(*args: float, peak: float, strain_at_peak: float) -> flo
     phi_c, f_c, eps_cu = args[2:5]
     section, layers, steel = _case(args)
     strips = parabola_strips(section, peak * phi_c * f_c, strain_at_peak, eps_cu)
-    axis = neutral_axis(strips, layers, steel, eps_cu)
+    axis = _axis_by_parabola(*args, peak=peak, strain_at_peak=strain_at_peak)
     return moment(strips, layers, steel, eps_cu, axis)
 
 
