@@ -26,5 +26,5 @@ def edge_beam() -> Edge:
 @pytest.fixture(scope="session")
 def existing() -> Existing:
     """The beam with gaps, its sheet and its record."""
-    beam, sheet = built()
+    beam, sheet = built(cures=True)
     return beam, sheet, sheet.close()

@@ -41,6 +41,11 @@ def start(
     return beams.continuous_beam(sheet, **(dict(THREE_SPANS) | changes))
 
 
+def without_cures(beam: beams.ContinuousBeam) -> beams.ContinuousBeam:
+    """Return a beam that seeks no cures for its failing checks; the checks are the same."""
+    return beams.ContinuousBeam(beam.sheet, beam.inputs, beam.pair, cures=False)
+
+
 def analysed(**changes: Any) -> beams.ContinuousBeam:
     """Return the beam with its loads, spans and analysis recorded."""
     beam = start(**changes)

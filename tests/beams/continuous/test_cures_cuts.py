@@ -15,10 +15,11 @@ from lineproof.beams.continuous.cures_sought import cures_of
 from lineproof.beams.steps import Steps
 from lineproof.sheet import Sheet
 
-from .cures_told import FLEXURE, check, lighter, note, sheet_of, told
-from .flow import run, start
+from .cures_told import FLEXURE, check, checked, lighter, note, sheet_of, told
+from .flow import CALLS, run, start, without_cures
 
 THROUGH = (*FLEXURE, "deflections")
+ANCHORED = CALLS[: CALLS.index("anchorage") + 1]
 TIP: Mapping[str, Any] = {
     "spans": ["1.5 m", "7 m"], "supports": ["free", "column 450 mm", "column 450 mm"],
     "bottom_bars": [None, "4-20M"], "top_bars": [None, "3-20M", "3-20M"],
@@ -34,8 +35,8 @@ def test_what_is_told_for_the_rise_of_a_tip_holds() -> None:
     h = told(text, r"a depth of (\d+) mm in this span and the one behind")
 
     assert not check(lifted, entry)
-    assert check(sheet_of(THROUGH, **TIP, **lighter(h=h)), entry)
-    assert not check(sheet_of(THROUGH, **TIP, **lighter(h=h - 10)), entry)
+    assert check(checked(THROUGH, **TIP, **lighter(h=h)), entry)
+    assert not check(checked(THROUGH, **TIP, **lighter(h=h - 10)), entry)
 
 
 def runs(*rows: tuple[str, str, float, float]) -> list[dict[str, Any]]:
@@ -60,21 +61,21 @@ def test_what_is_told_for_the_rise_of_a_short_span_holds() -> None:
     h = told(note(lifted, "deflection-2", "deflection-rise"), r"a depth of (\d+) mm")
 
     assert not check(lifted, entry)
-    assert check(sheet_of(THROUGH, **beam, **lighter(h=h)), entry)
-    assert not check(sheet_of(THROUGH, **beam, **lighter(h=h - 10)), entry)
+    assert check(checked(THROUGH, **beam, **lighter(h=h)), entry)
+    assert not check(checked(THROUGH, **beam, **lighter(h=h - 10)), entry)
 
 
 BOTTOM = ("bottom", "4-25M", -0.15, 24.55)
 LONG = ("top", "2-25M", -0.15, 24.55)
 
 
-def cut_at(x: float, spacing: float = 250) -> Sheet:
+def cut_at(x: float, spacing: float = 250, *, cures: bool = False) -> Sheet:
     """The beam with 2-25M that begin x m along it, cut in the tension zone before support 2."""
     beam = start(
         bar_runs=runs(BOTTOM, LONG, ("top", "2-25M", x, 24.55)),
         stirrups=[{"span": k, "spacing": f"{spacing if k == 1 else 250:g} mm"} for k in (1, 2, 3)],
     )
-    return run(beam)
+    return run(beam if cures else without_cures(beam), ANCHORED)
 
 
 def low(sheet: Sheet) -> bool:
@@ -88,7 +89,7 @@ CUT = "anchorage-top-2-left-cut-1"
 
 
 def test_a_longer_bar_or_closer_stirrups_let_bars_end_in_tension() -> None:
-    short = cut_at(6.9)
+    short = cut_at(6.9, cures=True)
     text = note(short, f"{CUT}-shear")
     V_f, limit = check(short, f"{CUT}-shear/cut-low-shear").value
     assert V_f > limit

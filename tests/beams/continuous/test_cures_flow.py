@@ -22,17 +22,18 @@ from lineproof.record.entry import CHECK
 from lineproof.record.printing import utilisation
 from lineproof.sheet import Sheet
 
-from .cures_told import FLEXURE, check, lighter, note, sheet_of, told
-from .flow import CALLS, PROJECT, run
+from .cures_told import FLEXURE, check, checked, lighter, note, sheet_of, told
+from .flow import CALLS, PROJECT, run, without_cures
 from .notebooks import EXISTING_BEAM, inputs_of
 
 THROUGH = tuple(CALLS[: CALLS.index("anchorage") + 1])
 
 
-def existing(calls: tuple[str, ...] = CALLS, **changes: Any) -> Sheet:
+def existing(calls: tuple[str, ...] = CALLS, *, cures: bool = False, **changes: Any) -> Sheet:
     """Return the sheet of the existing beam of the notebook with some inputs changed."""
     sheet = Sheet("B3", "Existing beam", project=PROJECT)
-    return run(beams.continuous_beam(sheet, **(inputs_of(EXISTING_BEAM) | changes)), calls)
+    beam = beams.continuous_beam(sheet, **(inputs_of(EXISTING_BEAM) | changes))
+    return run(beam if cures else without_cures(beam), calls)
 
 
 # -- flexure ---------------------------------------------------------------------------------
@@ -50,7 +51,7 @@ def test_more_bars_as_told_hold_in_the_flow() -> None:
     assert number == 5
     assert told(text, r"(\d+) mm² of bars") == pytest.approx(weak.entry("sag-1/A_sr").value, abs=10)
     for bars, holds in (("5-20M", True), ("4-20M", False)):
-        again = sheet_of(FLEXURE, bottom_bars=[bars, "5-20M", "5-20M"])
+        again = checked(FLEXURE, bottom_bars=[bars, "5-20M", "5-20M"])
         assert bool(check(again, "sag-1/strength")) is holds
         assert bool(check(again, "sag-1/steel-for-moment")) is holds
     assert "No width of the web up to 1500 mm and no concrete up to 80 MPa would do" in text
@@ -59,8 +60,8 @@ def test_more_bars_as_told_hold_in_the_flow() -> None:
 def test_the_depth_told_holds_in_the_flow_with_the_loads_as_they_are() -> None:
     weak = sheet_of(FLEXURE, **WEAK)
     depth = told(note(weak, "sag-1"), r"a depth of (\d+) mm")
-    again = sheet_of(FLEXURE, **WEAK, **lighter(h=depth))
-    less = sheet_of(FLEXURE, **WEAK, **lighter(h=depth - 10))
+    again = checked(FLEXURE, **WEAK, **lighter(h=depth))
+    less = checked(FLEXURE, **WEAK, **lighter(h=depth - 10))
 
     moment = weak.entry("sag-1/M_f").value
     assert again.entry("sag-1/M_f").value == pytest.approx(moment, rel=1e-4)
@@ -71,8 +72,8 @@ def test_the_depth_told_holds_in_the_flow_with_the_loads_as_they_are() -> None:
 def test_what_no_width_or_concrete_cures_fails_with_much_of_both() -> None:
     weak = sheet_of(FLEXURE, **WEAK)
     assert "no concrete up to 80 MPa" in note(weak, "sag-1")
-    assert not check(sheet_of(FLEXURE, **WEAK, f_c="80 MPa"), "sag-1/strength")
-    assert not check(sheet_of(FLEXURE, **WEAK, **lighter(b_w=700)), "sag-1/strength")
+    assert not check(checked(FLEXURE, **WEAK, f_c="80 MPa"), "sag-1/strength")
+    assert not check(checked(FLEXURE, **WEAK, **lighter(b_w=700)), "sag-1/strength")
 
 
 def test_top_bars_and_the_minimum_of_the_flange() -> None:
@@ -94,7 +95,7 @@ def test_top_bars_and_the_minimum_of_the_flange() -> None:
     assert "6-20M" in note(weak, "hog-2-right")
     (beside,) = [s for s in weak.entries_of("hog-2-right") if s.startswith("cure-")]
     assert check(weak, f"hog-2-right/{beside}").source.title == "Cure: moment resistance"
-    again = sheet_of(FLEXURE, top_bars=[None, "4-20M", None, None])
+    again = checked(FLEXURE, top_bars=[None, "4-20M", None, None])
     # 4 in the web and 1 in each overhang are the six
     assert again.entry("hog-2-left/A_s").value == 1800
     assert not failing(next(p for p in again.parts if p.key == "hog-2-left"))
@@ -107,7 +108,7 @@ def test_smaller_bars_told_for_cracks_hold() -> None:
     text = note(weak, "sag-1")
 
     assert "bars 30M of at least the same area" in text
-    again = sheet_of(FLEXURE, **wet, bottom_bars=["3-30M", None, None])  # 2100 of 2000 mm2
+    again = checked(FLEXURE, **wet, bottom_bars=["3-30M", None, None])  # 2100 of 2000 mm2
     assert not check(weak, "sag-1/crack-control")
     assert check(again, "sag-1/crack-control")
 
@@ -128,8 +129,8 @@ def test_the_spacing_told_holds_in_the_flow() -> None:
     s = told(note(wide, "shear-1-left"), r"stirrups at (\d+) mm or less")
 
     assert s == 350
-    assert check(sheet_of(SHEAR, stirrups=zones(s)), "shear-1-left/stirrup-spacing")
-    assert not check(sheet_of(SHEAR, stirrups=zones(s + 25)), "shear-1-left/stirrup-spacing")
+    assert check(checked(SHEAR, stirrups=zones(s)), "shear-1-left/stirrup-spacing")
+    assert not check(checked(SHEAR, stirrups=zones(s + 25)), "shear-1-left/stirrup-spacing")
 
 
 def test_where_there_are_no_stirrups_stirrups_are_told() -> None:
@@ -139,7 +140,7 @@ def test_where_there_are_no_stirrups_stirrups_are_told() -> None:
 
     assert not check(gap, "shear-2-right/shear-strength")
     filled = [z | ({"to": "8.75 m"} if z["span"] == 2 else {}) for z in zones(s)]
-    assert check(sheet_of(SHEAR, stirrups=filled), "shear-2-right/shear-strength")
+    assert check(checked(SHEAR, stirrups=filled), "shear-2-right/shear-strength")
     wider = [z | {"spacing": f"{s + 25:g} mm"} for z in filled]
     failed = sheet_of(SHEAR, stirrups=wider)
     assert failing(next(p for p in failed.parts if p.key == "shear-2-right"))
@@ -157,14 +158,14 @@ def test_concrete_and_width_told_hold_by_the_simplified_method() -> None:
     b_w = told(text, r"a web (\d+) mm wide")
 
     entry = "shear-3-right/shear-strength"
-    assert check(sheet_of(SHEAR, **fixed, f_c=f"{f_c:g} MPa"), entry)
-    assert not check(sheet_of(SHEAR, **fixed, f_c=f"{f_c - 5:g} MPa"), entry)
+    assert check(checked(SHEAR, **fixed, f_c=f"{f_c:g} MPa"), entry)
+    assert not check(checked(SHEAR, **fixed, f_c=f"{f_c - 5:g} MPa"), entry)
     wide = sheet_of(SHEAR, **fixed, **lighter(b_w=b_w))
     assert wide.entry("shear-3-right/V_f").value == pytest.approx(
         bare.entry("shear-3-right/V_f").value, rel=1e-3
     )
     assert check(wide, entry)
-    assert not check(sheet_of(SHEAR, **fixed, **lighter(b_w=b_w - 10)), entry)
+    assert not check(checked(SHEAR, **fixed, **lighter(b_w=b_w - 10)), entry)
 
 
 def test_steel_told_for_the_tension_side_is_that_of_the_face_in_tension() -> None:
@@ -172,7 +173,7 @@ def test_steel_told_for_the_tension_side_is_that_of_the_face_in_tension() -> Non
 
     The depth is that of the bottom bars as well, of which no more would fit: that is not asked.
     """
-    asked = existing((*FLEXURE, "shear"))
+    asked = existing((*FLEXURE, "shear"), cures=True)
     text = note(asked, "shear-1-right")
     bars = [
         run | ({"bars": "2-20M"} if run["bars"] == "1-20M" else {})
@@ -201,8 +202,8 @@ def test_the_depth_told_for_a_deflection_holds_in_the_flow() -> None:
 
     entry = "deflection-1/deflection-attached"
     assert not check(shallow, entry)
-    assert check(sheet_of(calls, **bars, **lighter(h=h, h_before=450.0)), entry)
-    assert not check(sheet_of(calls, **bars, **lighter(h=h - 10, h_before=450.0)), entry)
+    assert check(checked(calls, **bars, **lighter(h=h, h_before=450.0)), entry)
+    assert not check(checked(calls, **bars, **lighter(h=h - 10, h_before=450.0)), entry)
     assert "No number of bars 25M in one layer" in note(shallow, "deflection-1")
 
 
@@ -212,7 +213,7 @@ def test_the_depth_told_for_a_deflection_holds_in_the_flow() -> None:
 def test_bars_too_short_are_told_by_how_much() -> None:
     """Top bars that end 506 mm past their point shall end 829 mm past it: 330 mm longer do."""
     runs = inputs_of(EXISTING_BEAM)["bar_runs"]
-    short = existing(THROUGH)
+    short = existing(THROUGH, cures=True)
     part = "anchorage-top-2-left-cut-1"
     needed, provided = check(short, f"{part}/cut-extension").value
     more = told(note(short, part), r"made (\d+) mm longer")

@@ -16,7 +16,7 @@ from lineproof.record import Record, recompute
 from .flow import run, start
 
 random_beams = settings(
-    max_examples=60, deadline=None, derandomize=True, database=None,
+    max_examples=40, deadline=None, derandomize=True, database=None,
     phases=[Phase.explicit, Phase.generate], suppress_health_check=list(HealthCheck),
 )  # fmt: skip
 PAIRS = ("NBC 2015 + A23.3-14", "NBC 2020 + A23.3:19")

@@ -284,7 +284,7 @@ def test_bars_beside_those_of_the_section_run_into_their_support() -> None:
 
 def test_a_support_without_top_bars_is_not_given_any() -> None:
     """What does not stand is not chosen: no resistance, no bars in the table of the summary."""
-    beam, sheet = built([row("bottom", "4-20M", -0.1, 12.1), *BESIDE])
+    beam, sheet = built([row("bottom", "4-20M", -0.1, 12.1), *BESIDE], cures=True)
     record = sheet.close()
     assert beam.design.top.keys() == set()
     for face in ("hog-2-left", "hog-2-right"):

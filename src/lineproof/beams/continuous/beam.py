@@ -101,7 +101,8 @@ class ContinuousBeam:
             for entry in part.entries.values()
         )
         if self._last is None or self._last[0] != key:
-            self._last = key, design_of(self.model, self.pair), Found(Tried(self._with_bars))
+            tried = Tried(self._with_bars) if self._cures else None
+            self._last = key, design_of(self.model, self.pair), Found(tried)
         _, design, cures = self._last
         return replace(design, model=self.model), cures
 

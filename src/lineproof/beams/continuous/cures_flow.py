@@ -62,10 +62,10 @@ _SAME = 1e-9
 class Found:
     """The cures found for one design, by id and digest of their checks; what is sought is added.
 
-    ``tried`` calculates the beam with other bars.
+    ``tried`` calculates the beam with other bars; None where no cures are to be sought.
     """
 
-    tried: Tried
+    tried: Tried | None
     cures: dict[tuple[str, str], list[Cure]] = field(default_factory=dict)
 
 
@@ -101,11 +101,11 @@ def _why_none(check: Entry) -> str:
 
 
 def _once(design: Design, check: Entry, found: Found) -> list[Cure]:
-    """Return the cures of a check, sought if they are not found yet."""
+    """Return the cures of a check, sought if they are not found yet; none where none are sought."""
     key = check.id, check.digest
-    if key not in found.cures:
+    if key not in found.cures and found.tried is not None:
         found.cures[key] = _cures(design, check, found.tried)
-    return found.cures[key]
+    return found.cures.get(key, [])
 
 
 def _cures(design: Design, check: Entry, tried: Tried) -> list[Cure]:
@@ -152,7 +152,12 @@ def _leads(part: Part) -> bool:
 
 
 def _briefly(design: Design, check: Entry, found: Found) -> str:
-    """Return the cures alone, without what would not do; the whole sentence where none does."""
+    """Return the cures alone, without what would not do; the whole sentence where none does.
+
+    Nothing where none are sought.
+    """
+    if found.tried is None:
+        return ""
     able = [cure.text for cure in _once(design, check, found) if cure.value is not None]
     return lettered(able) if able else cure_text(design, check, found)
 
