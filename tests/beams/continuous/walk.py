@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
@@ -32,16 +33,29 @@ class Walk:
         """Return a recorded value [N, mm]."""
         return float(self.beam.sheet.entry(entry_id).value)
 
+    @cached_property
+    def runs(self) -> tuple[BarRun, ...]:
+        """The bars along the beam, without those of the side faces."""
+        return tuple(r for r in self.beam.design.runs if r.place != "side face")
+
+    @cached_property
+    def developed(self) -> list[tuple[str, float]]:
+        """The recorded development lengths with the titles of their parts."""
+        return [
+            (part["title"], self.value(f"{part['key']}/l_d"))
+            for part in self.record.data["parts"]
+            if part["title"].startswith("Development of ")
+        ]
+
     def length(self, run: BarRun) -> float:
         """Return the recorded development length of a run's bars: the longest of its kind."""
         where = "in the overhang" if run.place == "overhang" else "in a layer"
-        found = [
-            self.value(f"{part['key']}/l_d")
-            for part in self.record.data["parts"]
-            if part["title"].startswith(f"Development of {run.face} bars {run.size}, ")
-            and part["title"].endswith(where)
-        ]
-        return max(found)
+        head = f"Development of {run.face} bars {run.size}, "
+        return max(
+            length
+            for title, length in self.developed
+            if title.startswith(head) and title.endswith(where)
+        )
 
     def hook(self, run: BarRun, end: str) -> float:
         """Return the recorded development length of a hook."""
@@ -87,7 +101,7 @@ def in_lap(one: BarRun, other: BarRun, length: float) -> bool:
 
 def standing(walk: Walk, face: str, x: float) -> tuple[float, float]:
     """Return the area that counts at a place, and the distance of its centre from the face."""
-    runs = tuple(r for r in walk.beam.design.runs if r.place != "side face")
+    runs = walk.runs
     here = [r for r in runs if r.face == face and r.start <= x <= r.end]
     counted: dict[BarRun, float] = {}
     for bars in here:
