@@ -1,6 +1,6 @@
 """Cures of an existing beam with gaps in its bars: each is typed back in, and its check holds.
 
-The beam is that of ``test_gaps``.
+The beam is that of ``beam_with_gaps``.
 """
 
 from __future__ import annotations

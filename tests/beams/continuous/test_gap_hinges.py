@@ -1,4 +1,4 @@
-"""Hinges of the beam of ``test_gaps``: where it cracks without bars under loads of another span."""
+"""Hinges of ``beam_with_gaps``: where it cracks without bars under loads of another span."""
 
 from __future__ import annotations
 

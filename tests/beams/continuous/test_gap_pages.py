@@ -1,7 +1,7 @@
 """How a beam with gaps reads on paper: what stands first, the drawings, lengths that fall short.
 
-The beam is that of ``test_gaps``: 4-20M below stop at 2.30 m and begin again at 3.00 m; 3-25M over
-the column reach 0.90 m to each side of it; no stirrups.
+The beam is that of ``beam_with_gaps``: 4-20M below stop at 2.30 m and begin again at 3.00 m; 3-25M
+over the column reach 0.90 m to each side of it; no stirrups.
 """
 
 from __future__ import annotations

@@ -1,6 +1,6 @@
 """Bars of several sizes and layers along a beam, as a checker follows them by hand.
 
-The beam is that of ``test_two_sizes``: h 600, b_w 350, cover 30 to stirrups 10M (11.3 mm, bend
+The beam is that of ``two_sizes``: h 600, b_w 350, cover 30 to stirrups 10M (11.3 mm, bend
 22.5 mm), 325 mm apart at most, f_c' 25, f_y 400, flange 130 mm; walls 300 mm, column 400 mm at
 7.2 m. Bars in a layer of n stand (350 - 2*(41.3 + 22.5))/(n - 1) = 222.4/(n - 1) mm apart.
 """
