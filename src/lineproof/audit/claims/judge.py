@@ -253,7 +253,8 @@ class _Judge:
             note = f"with {self._named(others)} it makes the right {self._named([total])}"
             note = f"{note}: another division of the same sum"
             return replace(made, verdict=Verdict.OTHER_METHOD, note=note)
-        around = [made.follows, self.worlds.sound.follows[node.id].interval]
+        right = Interval(made.right, made.right)  # as a spreadsheet shows it, full digits inside
+        around = [made.follows, self.worlds.sound.follows[node.id].interval, right]
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
