@@ -174,7 +174,12 @@ def test_a_spreadsheet_rounds_what_it_shows_and_works_with_all_digits() -> None:
 
     From 93 it would be 1749.3, nearer to 1700. 262.9 and 382.8 mm2 stand as 260 and 380.
     """
-    lines = {"a = k_1*c": "mm", "A_s = k_2*a": "mm2", "A_v = k_1*A_t": "mm2", "A_g = k_1*A_b": "mm2"}
+    lines = {
+        "a = k_1*c": "mm",
+        "A_s = k_2*a": "mm2",
+        "A_v = k_1*A_t": "mm2",
+        "A_g = k_1*A_b": "mm2",
+    }
     givens = {"k_1": "1.1", "c": "84.75 mm", "k_2": "18.81 mm", "A_t": "239 mm2", "A_b": "348 mm2"}
     found = said(sheet_of(lines, givens).close(), A_s="1800", a="93", A_v="260", A_g="380")
     assert found.verdict is Verdict.SAFE_ROUNDING

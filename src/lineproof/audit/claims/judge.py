@@ -8,6 +8,7 @@ from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
+from lineproof.audit.claims.copies import stands_alone, without_circles
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
@@ -100,6 +101,8 @@ class _Judge:
         self.turned: dict[str, list[str]] = {}
         self.as_written: dict[str, bool] = {}
         self.doubted: dict[str, bool] = {}
+        self.alone: dict[str, bool] = {}
+        self.order = {entry_id: at for at, entry_id in enumerate(graph.nodes)}
 
     def all(self) -> Iterator[Judged]:
         for node in self.graph:
@@ -253,8 +256,7 @@ class _Judge:
             note = f"with {self._named(others)} it makes the right {self._named([total])}"
             note = f"{note}: another division of the same sum"
             return replace(made, verdict=Verdict.OTHER_METHOD, note=note)
-        right = Interval(made.right, made.right)  # as a spreadsheet shows it, full digits inside
-        around = [made.follows, self.worlds.sound.follows[node.id].interval, right]
+        around = self._around(node)
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
@@ -338,7 +340,25 @@ class _Judge:
         if self.find is None:
             return ()
         slips = self.find(self.graph, node.id, self.used, claim, self.typed)
-        return tuple(map(_without_underscore, slips))
+        later = self.order[node.id].__lt__
+        told = without_circles(slips, claim, self._is_alone, lambda i: later(self.order[i]))
+        return tuple(map(_without_underscore, told))
+
+    def _is_alone(self, entry_id: str) -> bool:
+        """Tell whether a claimed line follows from nothing, nor is a rounding of it."""
+        if entry_id not in self.alone:
+            claim = self.claims.get(entry_id)
+            if claim is None or not (node := self.graph[entry_id]).is_computed:
+                self.alone[entry_id] = False
+            else:
+                self.alone[entry_id] = stands_alone(claim, node.symbol, self._around(node))
+        return self.alone[entry_id]
+
+    def _around(self, node: Node) -> list[Interval]:
+        """Return what a line may be: from the values claimed, put right, and as recorded."""
+        right = self.graph.stored[node.id]  # as a spreadsheet shows it, with all digits inside
+        worlds = self.worlds.claimed, self.worlds.sound
+        return [*(w.follows[node.id].interval for w in worlds), Interval(right, right)]
 
     # -- what later lines carry ------------------------------------------------------------
 

@@ -87,7 +87,7 @@ def ranked(fits: Iterable[Fit], claim: Claim) -> tuple[Slip, ...]:
 def _slip(group: Group, claim: Claim) -> Slip:
     kind, *others = group.fits
     causes = tuple(map(_cause, group.fits.values()))
-    said = _sentence(causes, group.value, claim)
+    said = sentence_of(causes, group.value, claim)
     return Slip(kind, said, group.value, group.share, tuple(others), causes)
 
 
@@ -125,7 +125,7 @@ def _equal(first: float, second: float) -> bool:
     return abs(first - second) <= _SAME * max(abs(first), abs(second))
 
 
-def _sentence(causes: Sequence[Cause], value: float, claim: Claim) -> str:
+def sentence_of(causes: Sequence[Cause], value: float, claim: Claim) -> str:
     """Say what gives the claimed value, and the other cause of the same value that is likeliest."""
     first, *others = causes
     how = "exactly" if claim.stands_for.holds(value) else "within the digits of its arguments"
