@@ -211,6 +211,14 @@ def test_two_revisions_of_one_drawing() -> None:
     assert second.advice == "Compare the two revisions before its other differences are judged."
 
 
+def test_a_unit_typed_beside_the_number_is_told_and_not_that_of_the_column() -> None:
+    record = demo("floor-beam")
+    rows = as_drawn(items_of(record), {("overall depth", "the beam"): "0.6 m"})
+    in_mm = [Row(row.number, row.cells | {"unit": "mm"}) for row in rows]
+    (finding,) = drawing_findings(record, in_mm)
+    assert finding.what == "Overall depth: drawn 0.6 m, 620 mm in the calc."
+
+
 def test_units_of_the_drawing_may_be_others() -> None:
     # 24.41 in = 620.0 mm; 15 in = 381 mm.
     assert found({("overall depth", "the beam"): "24.41 in"}) == ()

@@ -173,7 +173,7 @@ def _row(row: Row, text: str, names: set[str], items: Mapping[tuple[str, str], I
         row.number,
         name,
         place if item is None else item.place,
-        text if not unit or unit in text else f"{text} {unit}",
+        _with_unit(text, unit),
         value,
         row.cells.get("drawing", ""),
         row.cells.get("revision", ""),
@@ -191,8 +191,12 @@ def _value(name: str, text: str, unit: str) -> float:
     if reader is not None:
         return reader(text)
     wanted = "MPa" if name.startswith("strength") else "mm"
-    typed = text if re.search(r"[A-Za-z]", text) else f"{text} {unit}".strip()
-    return read_quantity("drawn", typed, wanted).value
+    return read_quantity("drawn", _with_unit(text, unit), wanted).value
+
+
+def _with_unit(text: str, unit: str) -> str:
+    """Return what is drawn with the unit of its column, unless one is typed beside the number."""
+    return text if re.search(r"[A-Za-z]", text) else f"{text} {unit}".strip()
 
 
 def _bars(text: str) -> float:
