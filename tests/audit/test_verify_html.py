@@ -186,6 +186,12 @@ def test_a_page_of_others_is_not_ours() -> None:
     assert checked("<html><body>M = 551 kN.m</body></html>").outcome is Outcome.NOT_OURS
 
 
+def test_a_page_whose_end_is_missing_is_not_called_one_of_others() -> None:
+    page = by.html()
+    with pytest.raises(UserError, match="cut off, its end is missing; give the whole file"):
+        checked(page[: page.index("</main>")])
+
+
 def test_a_record_cut_off_is_a_message() -> None:
     with pytest.raises(UserError, match="cut short"):
         checked(by.html()[: by.html().index('"parts"')])

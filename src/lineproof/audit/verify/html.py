@@ -30,6 +30,7 @@ _VOID = frozenset({"br", "hr", "img", "input", "link", "meta", "area", "base", "
                    "source", "track", "wbr"})  # fmt: skip
 _RECORD = re.compile(rf'<script\s[^<>]*type="{re.escape(MIME)}"', re.IGNORECASE)
 _DIGEST = re.compile(r"Record ([0-9a-f]{16}(?: [0-9a-f]{16})*)\Z")
+_BEGUN = re.compile(r"\s*<!doctype html", re.IGNORECASE)
 _PLAIN = frozenset({"html", "head", "body", "meta", "title"})
 _ADDRESSES = frozenset({"href", "src", "xlink:href"})
 _AROUND = 24
@@ -187,6 +188,10 @@ def verify_html(text: str, name: str, against: Sequence[Source] = ()) -> Verific
     ] or list(against)
     said = _DIGEST.search(given.blocks[""].text) if "" in given.blocks else None
     if not records and said is None:
+        if _BEGUN.match(text) and "</html" not in text.lower():
+            raise UserError(
+                f"{name}: this page is cut off, its end is missing; give the whole file"
+            )
         return Verification(name, Outcome.NOT_OURS)
     alterations = altered_records(records)
     if records and against:
