@@ -9,6 +9,7 @@ from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdi
 from lineproof.audit.effects import effects_of, named_line, turned_sentence
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.search import none_fits
+from lineproof.typeset.sentences import begun
 from lineproof.typeset.values import told
 
 SOURCE = "claims"
@@ -121,8 +122,7 @@ def _advice(graph: Graph, judged: Judged) -> str:
     if judged.verdict is Verdict.DOUBTFUL:
         return "Doubtful, not proved an error: ask which of the two was done."
     if judged.slips:
-        sentence = judged.slips[0].sentence
-        return sentence[:1].upper() + sentence[1:]
+        return begun(judged.slips[0].sentence)
     if judged.verdict is Verdict.ORIGIN:
         return none_fits(graph, judged.id)
     if judged.verdict is Verdict.INPUT:

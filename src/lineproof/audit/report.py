@@ -30,6 +30,7 @@ from lineproof.package.files import table_csv
 from lineproof.package.words import AUDIT_REPORT
 from lineproof.record import Record
 from lineproof.sheet import Sheet
+from lineproof.typeset.sentences import begun
 from lineproof.typeset.values import number_text, unit_text
 
 MOST_EFFECTS = 12
@@ -211,7 +212,7 @@ class Report:
         entry = self.graph.record.entries.get(effect.check, {})
         title = str(entry.get("title", "")) or effect.check
         return [
-            self._label(effect.check), _capital(title),
+            self._label(effect.check), begun(title),
             self.titles.get(effect.check.partition("/")[0], ""),
             _ratio(effect.claimed, holds=effect.holds_as_claimed),
             _ratio(effect.right, holds=effect.holds), _THEN[effect.holds_as_claimed, effect.holds],
@@ -274,7 +275,7 @@ def _judged_rows(judged: Iterable[Judged], graph: Graph) -> Iterator[list[str]]:
     for each in judged:
         node = graph[each.id]
         claim = each.claim
-        name = _capital(node.title) or node.symbol
+        name = begun(node.title) or node.symbol
         yield [
             each.id, node.label, name,
             "" if claim is None else _claimed(claim),
@@ -317,14 +318,10 @@ def _ratio(ratio: float | None, *, holds: bool) -> str:
 def _text(sentence: str) -> str:
     """Return a sentence with a capital and a full stop."""
     text = sentence.strip()
-    return _capital(text) + ("" if text.endswith((".", "?", "!", ":")) else ".")
+    return begun(text) + ("" if text.endswith((".", "?", "!", ":")) else ".")
 
 
 def _is_told(slip: Slip, said: str) -> bool:
     """Tell whether what a finding says names a slip already, by any of its causes."""
     words = [cause.words for cause in slip.causes] or [slip.sentence.rstrip(".")]
     return any(each.lower() in said.lower() for each in words)
-
-
-def _capital(text: str) -> str:
-    return f"{text[:1].upper()}{text[1:]}"

@@ -11,6 +11,7 @@ from lineproof.audit.findings import as_typed, cited, shown
 from lineproof.audit.graph import Graph, Node
 from lineproof.quantity.units import internal_factor
 from lineproof.typeset import printable
+from lineproof.typeset.sentences import begun
 
 MOST_EFFECTS = 5
 MOST_SLIPS = 3
@@ -73,7 +74,7 @@ def _finding(number: int, finding: Finding) -> Iterator[str]:
     place = "" if told else f"{finding.ids[0]}: "
     yield f"{number:4}  {place}{finding.what}{clause}"
     if finding.advice:
-        yield f"      {finding.advice[:1].upper()}{finding.advice[1:]}"
+        yield f"      {begun(finding.advice)}"
     for effect in finding.effects[:MOST_EFFECTS]:
         yield f"      - {effect.sentence}"
     if len(finding.effects) > MOST_EFFECTS:

@@ -10,6 +10,7 @@ from lineproof.audit.review.data import Raised, Review, Reviewer
 from lineproof.audit.review.marks import snapshot
 from lineproof.audit.review.merge import merge
 from lineproof.record import Record
+from lineproof.typeset.sentences import begun
 
 MOST_EFFECTS = 3
 """Effects told with a finding; the audit report tells them all."""
@@ -43,4 +44,4 @@ def _text(finding: Finding) -> str:
     effects = [effect.sentence for effect in finding.effects[:MOST_EFFECTS]]
     said = (finding.what, finding.advice, *effects, named_clause(finding.clause))
     text = " ".join(f"{text.strip().rstrip('.')}." for text in said if text.strip())
-    return f"{text[:1].upper()}{text[1:]}"
+    return begun(text)

@@ -15,6 +15,7 @@ from lineproof.package.reviewed import (
     PrintedStale,
 )
 from lineproof.record import Record
+from lineproof.typeset.sentences import begun
 
 MOST_LINES = 60
 """Lines that a change has made stale are named up to here; of more only the number is told."""
@@ -135,13 +136,13 @@ class _Words:
         """Say what has changed with the labels of its lines, where there are few of them."""
         why = stale.why
         if stale.gone or not 0 < len(stale.causes) <= MOST_LINES // 10:
-            return f"{why[:1].upper()}{why[1:]}."
+            return f"{begun(why)}."
         entries = self.record.entries
         named = ", ".join(
             f"{entries[line].get('title') or line} ({entries[line].get('label') or line})"
             for line in stale.causes
         )
-        return f"{named[:1].upper()}{named[1:]}: changed."
+        return f"{begun(named)}: changed."
 
     def conflict(self, each: Conflict) -> str:
         """Say what does not agree, a line by its number and title."""
