@@ -443,6 +443,10 @@ def test_the_project_file(tmp_path: Path) -> None:
     [
         (b"x = ", "not valid TOML"),
         (b"\xff\xfe", "cannot be read (not UTF-8 text)"),
+        (
+            b"[building]\nimportance = 'medium'",
+            "'medium' is no importance category; write 'low', 'normal', 'high' or 'post-disaster'",
+        ),
         (b"", "no code pair; write under [codes]: pair = 'NBC 2015 + A23.3-14'"),
         (b"codes = 3", "'codes' must be a table; write [codes]"),
         (b"drawings = 3\n[codes]\npair = 'x'", "'drawings' must be a list of tables"),

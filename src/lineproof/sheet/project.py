@@ -29,6 +29,8 @@ KNOWN: dict[str, tuple[str, ...]] = {
 
 ``location`` is that of the whole project, a row of ``locations`` that of one calculation.
 """
+IMPORTANCE = ("low", "normal", "high", "post-disaster")
+"""The importance categories of NBC 4.1.2.1."""
 LARGEST_FILE = 1_000_000
 DEEPEST = 3
 
@@ -99,7 +101,7 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
         given = facts.get(rows, [])
         if not (isinstance(given, list) and all(isinstance(row, dict) for row in given)):
             faults.append(f"{path}: {rows!r} must be a list of tables; write [[{rows}]]")
-    faults += [*_unknown(path, facts), *_unsigned(path, facts)]
+    faults += [*_unknown(path, facts), *_unsigned(path, facts), *_unimportant(path, facts)]
     if not isinstance(facts.get("codes"), dict) or "pair" not in facts["codes"]:
         faults.append(f"{path}: no code pair; write under [codes]: pair = 'NBC 2015 + A23.3-14'")
     elif not isinstance(facts["codes"]["pair"], str):
@@ -119,6 +121,17 @@ def _unsigned(path: Path, facts: dict[str, Any]) -> list[str]:
         for key in ("clause", "edition", "by", "on")
         if not str(row.get(key, "")).strip()
     ]
+
+
+def _unimportant(path: Path, facts: dict[str, Any]) -> list[str]:
+    """Return a fault for an importance category that the code has not."""
+    table = facts.get("building", {})
+    given = table.get("importance", "") if isinstance(table, dict) else ""
+    if given == "" or str(given).lower() in IMPORTANCE:
+        return []
+    words = f"{', '.join(map(repr, IMPORTANCE[:-1]))} or {IMPORTANCE[-1]!r}"
+    given = str(given)[:40]
+    return [f"{path}: building.importance: {given!r} is no importance category; write {words}"]
 
 
 def _unknown(path: Path, facts: dict[str, Any]) -> list[str]:
