@@ -100,6 +100,19 @@ def test_a_wrong_unit_is_refused_with_the_nearest_ones() -> None:
     assert str(caught.value) == "'kn' is not a unit of the list; write 'kN'"
 
 
+@pytest.mark.parametrize(
+    ("typed", "advice"),
+    [
+        ("ft lb", "'lbf.ft'"), ("kip-ft", "'kip.ft'"), ("kN m", "'kN.m'"),
+        ("furlong", "one such as 'mm', 'kN', 'kN.m' or 'MPa'"),
+    ],
+)  # fmt: skip
+def test_a_unit_in_other_words_is_refused_with_what_to_write(typed: str, advice: str) -> None:
+    with pytest.raises(UserError) as caught:
+        unit_named(typed)
+    assert advice in str(caught.value).partition("; write ")[2]
+
+
 # These texts hang pint, crash it or are read as something else.
 HOSTILE = [
     "9**9**9", "m**9**9**9", "*".join(["m"] * 3000), '__import__("os")', "kN-m", "m; s", "kn",

@@ -8,6 +8,7 @@ degrees, kg/m3, hours as such): the *internal unit* of its dimension.
 from __future__ import annotations
 
 import difflib
+import re
 from dataclasses import dataclass
 from decimal import Decimal
 from functools import cache, lru_cache
@@ -135,6 +136,7 @@ _SAME_UNIT = {
 }  # fmt: skip
 
 _EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "force": "kN"}
+_EXAMPLES = "one such as 'mm', 'kN', 'kN.m' or 'MPa'"
 
 METRE_SYSTEM = {
     "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
@@ -160,7 +162,7 @@ def unit_named(text: str) -> Unit:
     found = UNITS.get(spelling)
     if found is None:
         near = _nearest(spelling)
-        hint = f"; write {near}" if near else ""
+        hint = f"; write {near or _EXAMPLES}"
         if any(letter.isdigit() for letter in spelling[1:-1]) and " " in spelling:
             hint = "; write one number with one unit, such as '26 in'"
         raise UserError(f"{text[:40]!r} is not a unit of the list{hint}")
@@ -171,6 +173,10 @@ def _nearest(spelling: str) -> str:
     folded = {name.lower(): name for name in UNITS if name}
     if spelling.lower() in folded:  # right but for capitals
         return repr(folded[spelling.lower()])
+    words = ["lbf" if word == "lb" else word for word in re.split("[ .-]+", spelling[:20].lower())]
+    for product in (".".join(words), ".".join(reversed(words))):  # ft lb, kip-ft
+        if product in folded:
+            return repr(folded[product])
     close = difflib.get_close_matches(spelling[:20].lower(), folded, n=3, cutoff=0.6)
     return " or ".join(repr(folded[name]) for name in close)
 
