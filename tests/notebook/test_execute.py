@@ -1,5 +1,6 @@
 from __future__ import annotations
 
+import asyncio
 import json
 import os
 import signal
@@ -140,3 +141,16 @@ def test_a_cell_that_never_ends_is_stopped_by_the_keyboard(unrun: Notebook, tmp_
     with pytest.raises(KeyboardInterrupt):
         execute(with_code(unrun, "while True: pass"), "beam.ipynb", tmp_path)
     timer.join()
+
+
+def test_a_signal_while_the_kernel_starts_stops_without_a_traceback(
+    beam: Notebook, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """SIGTERM cancels the client's wait for its kernel; asyncio says so by what is no Exception."""
+
+    def cancelled(*_: object, **__: object) -> None:
+        raise asyncio.CancelledError
+
+    monkeypatch.setattr("nbclient.NotebookClient.execute", cancelled)
+    with pytest.raises(KeyboardInterrupt):
+        execute(beam, "beam.ipynb", tmp_path)

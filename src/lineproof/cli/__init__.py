@@ -168,8 +168,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
         reconfigure = getattr(stream, "reconfigure", None)
         if reconfigure is not None:  # a terminal without a character shows its code
             reconfigure(errors="backslashreplace")
-    options = parser().parse_args(arguments)
     try:
+        options = parser().parse_args(arguments)
         code = import_module(f"lineproof.cli.{options.command}").run(options)
         sys.stdout.flush()
     except UserError as error:

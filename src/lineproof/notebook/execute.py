@@ -47,6 +47,8 @@ def execute(
 
 
 def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progress | None) -> None:
+    from asyncio import CancelledError  # noqa: PLC0415 - as below
+
     from nbclient import NotebookClient  # noqa: PLC0415 - Jupyter, on first use only
 
     codes = [n for n, cell in enumerate(notebook.cells) if cell.cell_type == "code"]
@@ -71,6 +73,8 @@ def _run(notebook: Any, folder: Path, scratch: Path, log: Path, progress: Progre
     with log.open("wb") as stderr:
         try:
             client.execute(env=os.environ | {"IPYTHONDIR": str(scratch)}, stderr=stderr)
+        except CancelledError:  # ended by a signal while the kernel starts: no Exception
+            raise KeyboardInterrupt from None
         except Exception:
             # A signal makes the client end its kernel, which it then misses in one way or another.
             if getattr(client, "_async_cleanup_kernel_future", None) is None:
