@@ -72,6 +72,7 @@ EXAMPLES: dict[str, tuple[Given, Given]] = {
     "crack_control.SKIN_CLOSE": ({"s_sk": 200}, {"s_sk": 201}),
     "bars.FITS": ({"s_min": 35.28, "s_c": 58.9}, {"s_min": 35.28, "s_c": 17}),
     "bars.FITS_SECOND": ({"s_min2": 35.28, "s_c2": 35.28}, {"s_min2": 35.28, "s_c2": 35.2}),
+    "bars.FITS_OVERHANG": ({"s_mino": 30, "s_co": 30.5}, {"s_mino": 30, "s_co": -2.83}),
     "cover.DURABLE": ({"c_rs": 30, "c_c": 30}, {"c_rs": 40, "c_c": 30}),
     "cover.DURABLE_BAR": ({"c_rb": 60, "c_b1": 71.3}, {"c_rb": 71.4, "c_b1": 71.3}),
     "cover.FIRE_SAFE": ({"c_fire": 25, "c_b1": 41.3}, {"c_fire": 50, "c_b1": 41.3}),

@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 from lineproof.beams.bars import BarLayers, bars_text, in_line, of_one_size, spaced
+from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars
+from lineproof.standards.a23_3 import bars, development
 
 BARS = "bars"
 COMPRESSION_BARS = "compression-bars"
@@ -95,6 +96,13 @@ def record_fit_above(sheet: Sheet, layers: BarLayers, origin: str, d_b: Entry) -
     sheet.check(bars.FITS_SECOND, s_min2=least, s_c2=clear)
     sheet.line(bars.LAYER_DISTANCE, d_b=thicker)
     return sheet.line(bars.DEPTH_SECOND)
+
+
+def record_fit_overhang(steps: Steps, d_b: Entry) -> None:
+    """Record that top bars of diameter d_b spread over an overhang stand far enough apart."""
+    steps.line(bars.LEAST_CLEAR, symbol="s_mino", d_b=d_b)
+    steps.line(development.CLEAR_OVERHANG, symbol="s_co", d_b=d_b)
+    steps.check(bars.FITS_OVERHANG)
 
 
 def refuse_unfit(sheet: Sheet, layers: BarLayers, name: str, part: str = BARS) -> None:

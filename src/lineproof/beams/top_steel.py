@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from lineproof.beams.bars import BarLayer, bars_text
 from lineproof.beams.basics import record_bar_cover
+from lineproof.beams.bottom_bars import record_fit_overhang
 from lineproof.beams.flexure import record_yield, required, resistance
 from lineproof.beams.inputs import FloorBeamInputs, Shape
 from lineproof.beams.minimum_steel import minimum_of
@@ -80,6 +81,8 @@ def record_top_steel(
         if shape != "rectangular":
             steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
             steps.check(minimum.SPREAD)
+            if overhang:
+                record_fit_overhang(steps, steps.entry("d_b"))
 
 
 def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) -> Steps:

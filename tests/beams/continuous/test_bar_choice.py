@@ -189,3 +189,49 @@ def test_no_top_bars_are_better() -> None:
 @given(_random_beams(2, 3))
 def test_no_top_bars_of_random_beams_are_better(changes: dict[str, Any]) -> None:
     _tops_are_best(analysed(**changes))
+
+
+def test_bars_in_an_overhang_must_have_room_beside_each_other() -> None:
+    """The overhang of a cantilever of 2 m: 6-20M in 2000/20 = 100 mm, 100/6 - 19.5 = -2.83 mm.
+
+    On the other side of the support 6000/20 = 300 mm hold them: 300/6 - 19.5 = 30.5 mm, and at
+    least max(1.4*19.5, 1.4*20, 30) = 30 mm are asked for.
+    """
+    beam = analysed(
+        spans=["2 m", "6 m"], supports=["free", "column 400 mm", "column 400 mm"],
+        h="500 mm", b_w="400 mm", h_f="120 mm", spacing="3 m",
+    )  # fmt: skip
+    top = TopBars(BarLayer(2, "20M"), 6, 2)
+    flexure.record_hog(_sections(beam.model, beam, top={2: top}), 2)
+    left, right = (beam.sheet.entries_of(f"hog-2-{side}") for side in ("left", "right"))
+    assert left["s_co"].value == pytest.approx(100 / 6 - 19.5)
+    assert right["s_co"].value == pytest.approx(30.5)
+    assert left["s_mino"].value == right["s_mino"].value == 30
+    assert not left["bars-fit-overhang"]
+    assert right["bars-fit-overhang"]
+
+
+def test_overhangs_take_as_many_bars_as_cracks_ask_for() -> None:
+    """A parking floor with a cover of 60 mm: the web holds too few bars for 25 kN/mm.
+
+    15M: d_c = 60 + 11.3 + 8 = 79.3 mm, width 600 + 2*min(b_o, 14000/20) = 2000 mm at most; z =
+    240*(79.3*2*79.3*2000/n)**(1/3) <= 25 000 asks for n >= 22.3, and the web takes no more than
+    (600 - 2*(71.3 + 22.5))/(30 + 16) + 1 = 9 of them.
+    """
+    beam = analysed(
+        spans=["14 m", "12 m"], supports=["column 500 mm"] * 3, h="1100 mm", b_w="600 mm",
+        h_f="150 mm", spacing="5 m", f_c="40 MPa", superimposed="1.5 kPa", use="office",
+        exposure="C-1", cover="60 mm", fire_rating="1 h",
+    )  # fmt: skip
+    chosen = flexure_choice.choose_top(beam.model, beam.pair, {}, lambda _, __, ___: True)
+    top = chosen[2].bars
+    assert isinstance(top, TopBars)
+    width = 600 + 2 * 600  # of 12 m: 12 000/20 = 600 mm of each overhang
+    d_c = (
+        60
+        + 11.3
+        + {"15M": 16, "20M": 19.5, "25M": 25.2, "30M": 29.9, "35M": 35.7}[top.web.size] / 2
+    )
+    bars = top.web.number + 2 * top.overhang
+    assert 240 * (d_c * 2 * d_c * width / bars) ** (1 / 3) <= 25_000
+    assert max(chosen[2].checks.values()) <= 1

@@ -23,6 +23,7 @@ from lineproof.beams.continuous.section_checks import (
 )
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import minimum
+from lineproof.standards.a23_3.bars import BARS, LEAST_CLEAR
 
 FOR_SHEAR = "the bars that shear and torsion ask for (11.3.9, 11.3.10.6)"
 
@@ -172,21 +173,25 @@ def top_trial(rules: Rules, stirrup: str) -> Trial:
     return trial
 
 
-_MORE_BESIDE = 5
-"""Bars that an overhang may hold beyond what it needs, where the web is full."""
-
-
 def _top_layouts(section: Section, size: str, sides: int) -> list[TopBars]:
     """Return layouts of one size, least area first, then most bars within the web."""
-    least = 0
+    least = most = 0
     if sides:
         least = max(bars_for(_spread(at), size) for at in section.numbers)
+        most = min(_most_beside(at, size) for at in section.numbers)
     made = [
         TopBars(BarLayer(n, size), beside, sides)
         for n in range(2, MOST_BARS + 1)
-        for beside in (range(least, least + _MORE_BESIDE) if sides else (0,))
+        for beside in range(least, max(least, most) + 1)
     ]
     return sorted(made, key=lambda bars: (bars.area, bars.overhang))
+
+
+def _most_beside(at: Numbers, size: str) -> int:
+    """Return how many bars of a size stand side by side in an overhang."""
+    d_b = BARS.number(size, "d_b")
+    least = value(LEAST_CLEAR, at | {"d_b": d_b})
+    return int(value(minimum.SPREAD_WIDTH, at) / (least + d_b) + 1e-9)
 
 
 def _spread(at: Numbers) -> float:

@@ -5,7 +5,13 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 
 from lineproof.beams.bars import TopBars, of_one_size
-from lineproof.beams.bottom_bars import bars_inside, for_distance, placed, record_fit_above
+from lineproof.beams.bottom_bars import (
+    bars_inside,
+    for_distance,
+    placed,
+    record_fit_above,
+    record_fit_overhang,
+)
 from lineproof.beams.continuous.case_forces import NEAR, record_forces
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design import Design
@@ -354,14 +360,17 @@ def _record_top_bars(steps: Steps, model: Model, face: Face, top: TopBars) -> No
 
 
 def _check_spread(steps: Steps, top: TopBars) -> None:
-    """Record that the overhang holds the top bars that it needs (10.5.3.1)."""
+    """Record that the overhang holds the top bars that it needs, and has room for them."""
     steps.lines(minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
-    if top.spread_size == top.web.size:
-        steps.check(minimum.SPREAD)
-        return
-    title = "area of one bar in the overhang"
-    A_b = steps.sheet.lookup("A_bo", bars.BARS, top.spread_size, "A_b", title=title)
+    A_b, d_b = steps.entry("A_b"), steps.entry("d_b")
+    if top.spread_size != top.web.size:
+        look_up, size = steps.sheet.lookup, top.spread_size
+        title = "area of one bar in the overhang"
+        A_b = look_up("A_bo", bars.BARS, size, "A_b", title=title)
+        d_b = look_up("d_bo", bars.BARS, size, "d_b")
     steps.check(minimum.SPREAD, A_b=A_b)
+    if top.overhang:
+        record_fit_overhang(steps, d_b)
 
 
 def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top: TopBars) -> None:

@@ -13,7 +13,7 @@ from lineproof.beams.bars import BarLayer, BarLayers, TopBars, centre_of, of_one
 from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation, value
 from lineproof.beams.inputs import Shape
 from lineproof.formula import Formula
-from lineproof.standards.a23_3 import bars, crack_control, flexure, minimum
+from lineproof.standards.a23_3 import bars, crack_control, development, flexure, minimum
 from lineproof.standards.a23_3.bars import BARS
 
 Checks = dict[str, float]
@@ -133,7 +133,17 @@ def put_top(at: Numbers, shape: Shape, top: TopBars, stirrup: str) -> Checks:
         put(at, minimum.SPREAD_WIDTH, minimum.SPREAD_AREA)
         A_b = BARS.number(top.spread_size, "A_b")
         made[minimum.SPREAD.key] = utilisation(minimum.SPREAD, at | {"A_b": A_b})
+        if top.overhang:
+            made |= _beside_in_overhang(at, top.spread_size)
     return made
+
+
+def _beside_in_overhang(at: Numbers, size: str) -> Checks:
+    """Put the distances of the bars in an overhang into the numbers; return whether they fit."""
+    beside = at | {"d_b": BARS.number(size, "d_b")}
+    at["s_mino"] = value(bars.LEAST_CLEAR, beside)
+    at["s_co"] = value(development.CLEAR_OVERHANG, beside)
+    return {bars.FITS_OVERHANG.key: utilisation(bars.FITS_OVERHANG, at)}
 
 
 def put_resistance(at: Numbers) -> float:

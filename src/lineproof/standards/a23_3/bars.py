@@ -80,6 +80,15 @@ FITS_SECOND = _criterion(
     no="The bars of the second layer do NOT fit: fewer or larger bars, or a wider web.",
     key="bars-fit-2",
 )
+FITS_OVERHANG = _criterion(
+    "s_mino <= s_co",
+    clause="A23.1 6.6.5.2",
+    title="Bars fit into the overhang",
+    basis=FROM_MEMORY,
+    yes="The bars in the overhang fit.",
+    no="The bars in the overhang do NOT fit: fewer or larger bars there.",
+    key="bars-fit-overhang",
+)
 DEPTH_FIRST = _formula(
     "d_1 = h - c_c - d_bs - d_b/2",
     title="Depth to the first layer",
@@ -157,5 +166,5 @@ FORMULAS = (
     COMPRESSION_AREA,
     COMPRESSION_DEPTH,
 )
-CRITERIA = (FITS, FITS_SECOND)
+CRITERIA = (FITS, FITS_SECOND, FITS_OVERHANG)
 TABLES = (BARS, STIRRUP_BENDS, GRADES)

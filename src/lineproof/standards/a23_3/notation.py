@@ -117,6 +117,9 @@ _ROWS = (
     ("A_b2", "A", "b2", "", "area of one bar in the second layer or group", "mm2"),
     ("s_min2", "s", "min,2", "", "least clear distance between bars, second layer", "mm"),
     ("s_c2", "s", "c2", "", "clear distance between bars, second layer", "mm"),
+    ("s_mino", "s", "min,o", "", "least clear distance between bars in the overhang", "mm"),
+    ("s_co", "s", "co", "", "clear distance between bars in the overhang", "mm"),
+    ("d_bo", "d", "bo", "", "diameter of the bars in the overhang", "mm"),
     ("b_ot", "b", "ot", "", "width of overhang in which top bars are spread", "mm"),
     ("A_so", "A", "so", "", "least area of top bars in one overhang", "mm2"),
     # analysis
