@@ -36,6 +36,13 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
     "short spans of two lengths": {
         "spans": ["10 m", "5 m", "3 m", "9 m"], "supports": [COLUMN] * 5, "h": "700 mm",
     },
+    "a parking floor": {  # bars and stirrups changed each other round after round
+        "spans": ["14 m", "12 m"], "h": "1000 mm",
+        "supports": ["wall 400 mm", "column 500 mm", "wall 400 mm"],
+        "b_w": "450 mm", "h_f": "150 mm", "spacing": "5 m", "f_c": "40 MPa",
+        "superimposed": "1.5 kPa", "use": "office", "exposure": "C-1", "cover": "60 mm",
+        "fire_rating": "1 h",
+    },
 }  # fmt: skip
 
 

@@ -8,10 +8,16 @@ import pytest
 
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.bars_counted import record_area
-from lineproof.beams.continuous.detailing_data import SectionBars, SupportTop
+from lineproof.beams.continuous.detailing_data import SectionBars, ShearStretch, SupportTop
+from lineproof.beams.continuous.detailing_meeting import Reach, allowed
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import stand
-from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over, span_numbers
+from lineproof.beams.continuous.shear_stretches import (
+    BarsOver,
+    bars_over,
+    span_numbers,
+    weaker_of,
+)
 from lineproof.beams.steps import Steps
 from lineproof.sheet import Sheet
 
@@ -107,3 +113,34 @@ def test_a_symmetrical_beam_resists_alike_at_mirrored_places() -> None:
         for s in designed.shear
     }
     assert found == mirrored
+
+
+def test_the_weaker_of_two_divisions_at_each_place() -> None:
+    """0 to 4 m and 4 to 6 m against 1 to 5 m: the least of each quantity where both stand."""
+    first = [ShearStretch(0, 4000, 300.0, 200.0, 33.0), ShearStretch(4000, 6000, 250.0, 150.0)]
+    second = [ShearStretch(1000, 5000, 280.0, 210.0, 31.0)]
+
+    made = [(s.start, s.end, s.V_r, s.V_s, s.theta) for s in weaker_of(first, second)]
+
+    assert made == [
+        (0, 1000, 300, 200, 33), (1000, 4000, 280, 200, 31), (4000, 5000, 250, 150, 31),
+        (5000, 6000, 250, 150, first[1].theta),
+    ]  # fmt: skip
+    assert weaker_of((), second) == tuple(second)
+
+
+def test_bars_made_longer_end_where_a_tension_zone_allows_it() -> None:
+    """Short bars moved to 1.40 m: up to 1.72 m from the axis the shear is too high to end there.
+
+    The next place on the module of 50 mm is 1.75 m; where none is allowed they are as the others.
+    """
+    beam = start()
+    run(beam, CALLS[:3])
+    designed = beam.design.designed
+    axis = designed.outline.axes[1]
+    weak = [ShearStretch(0, axis + 1720, 1.0, 1.0), ShearStretch(axis + 1720, 1e5, 1e9, 1e9)]
+    found = Reach(3000, 1400)
+
+    for shear, short in ((weak, 1750), (weak[:1], 3000)):
+        there = replace(designed, shear=tuple(shear))
+        assert allowed(there, 2, "right", (), found) == Reach(3000, short)

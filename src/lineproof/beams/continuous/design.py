@@ -30,6 +30,7 @@ from lineproof.beams.continuous.detailing_data import (
     Basis,
     Designed,
     SectionBars,
+    ShearStretch,
     Stirrups,
     Strengths,
     SupportTop,
@@ -49,7 +50,12 @@ from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import Standing, stand
 from lineproof.beams.continuous.resistance_cover import Coverage, covered
-from lineproof.beams.continuous.shear_stretches import basis_of, span_numbers, stretches_of
+from lineproof.beams.continuous.shear_stretches import (
+    basis_of,
+    span_numbers,
+    stretches_of,
+    weaker_of,
+)
 from lineproof.beams.continuous.skin import SideBars, side_bars, skin_runs
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.errors import UserError
@@ -207,21 +213,26 @@ def _laid(
 ) -> tuple[Designed, tuple[BarRun, ...], Choice]:
     """Return bars along the beam and stirrups that rest on each other.
 
-    Both are worked out in turn until neither changes; after some rounds the bars stay as they are,
-    and the stirrups are counted as the widest met, so that the last rounds end.
+    Both are worked out in turn until neither changes. After some rounds the stirrups are counted as
+    the widest met, and bars are laid for the least resistance to shear met at each place, which
+    ends their change; after some more the bars stay as they are.
     """
     runs = lay_bars(designed) if given is None else given
+    least: tuple[ShearStretch, ...] = ()
     for number in count():
         choice = _stirrups(model, designed, runs)
         stirrups = _counted(designed, choice)
+        shear = stretches_of(choice, designed.outline)
         if number >= MOST_ROUNDS:
             stirrups = _worse(stirrups, designed.basis.stirrups)
+        least = weaker_of(least, shear) if number > MOST_ROUNDS else shear
         settled = replace(
-            designed, shear=stretches_of(choice, designed.outline),
-            basis=replace(designed.basis, stirrups=stirrups),
+            designed, shear=shear, basis=replace(designed.basis, stirrups=stirrups),
             torsion=torsion_forces(choice.checks, designed.bars, stand(designed, runs)),
         )  # fmt: skip
-        again = runs if given is not None or number >= MOST_ROUNDS else lay_bars(settled)
+        again = runs
+        if given is None and number < 2 * MOST_ROUNDS:
+            again = lay_bars(replace(settled, shear=least))
         if again == runs and stirrups == designed.basis.stirrups:
             return settled, runs, choice
         designed, runs = settled, again

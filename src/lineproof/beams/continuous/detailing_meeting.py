@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.anchorage import (
     available,
@@ -11,7 +11,14 @@ from lineproof.beams.continuous.anchorage import (
     fits_hook,
     has_hooks,
 )
-from lineproof.beams.continuous.cutoff import ceil50, far_face, half_of, support_of
+from lineproof.beams.continuous.cutoff import (
+    STEP,
+    ceil50,
+    far_face,
+    half_of,
+    support_of,
+    zones_at,
+)
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import serving
 from lineproof.beams.continuous.detailing_through import run_through
@@ -53,6 +60,22 @@ def with_restraint(
     return Reach(
         max(found.long, min(least, most)), max(found.short, min(least, most)), found.through
     )
+
+
+def allowed(
+    designed: Designed, support: int, side: End, continuing: Sequence[BarRun], found: Reach
+) -> Reach:
+    """Return a reach with the short bars as far as they may end in a tension zone (12.10.5).
+
+    Bars made longer for another reason may have left the place that was found for their end.
+    """
+    places = [found.short]
+    while places[-1] + STEP < found.long:
+        places.append(places[-1] + STEP)
+    span = support - 1 if side == "left" else support
+    zones = zones_at(designed, "top", span, other(side), places, continuing)
+    short = next((t for t, zone in zip(places, zones, strict=True) if zone), found.long)
+    return replace(found, short=short)
 
 
 def furthest(designed: Designed, span: int, near: End) -> float:

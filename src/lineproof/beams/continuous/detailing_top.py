@@ -37,6 +37,7 @@ from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
 from lineproof.beams.continuous.detailing_meeting import (
     Reach,
+    allowed,
     furthest,
     others_through,
     to_the_end,
@@ -91,6 +92,11 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
     spans = range(1, len(designed.outline.lengths) + 1)
     for span in spans:
         _fill(frame, span, reaches)
+    for support, each in reaches.items():
+        groups = groups_of(designed, support)
+        continuing = groups[: long_of(groups)]
+        for side, found in each.items():
+            each[side] = allowed(designed, support, side, continuing, found)
     rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
     corners = {support: row[0] for support, row in rows.items() if row}
     others = others_through(designed, rows)

@@ -8,6 +8,7 @@ lap is too short, each counts as far as it is developed by itself.
 from __future__ import annotations
 
 import math
+from bisect import bisect_right
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
@@ -245,6 +246,32 @@ def needed_top(model: Model, designed: Designed, support: int) -> float | None:
 def _down(value: float, step: float) -> float:
     """Return a resistance or an angle rounded down to what is printed of it."""
     return math.floor(float(value) / step * (1 + 1e-12)) * step
+
+
+def weaker_of(
+    first: Sequence[ShearStretch], second: Sequence[ShearStretch]
+) -> tuple[ShearStretch, ...]:
+    """Return the least resistances and angles of two divisions of a beam into stretches."""
+    made = []
+    both = (sorted(first, key=lambda s: s.start), sorted(second, key=lambda s: s.start))
+    starts = [[s.start for s in each] for each in both]
+    cuts = sorted({x for each in both for s in each for x in (s.start, s.end)})
+    for start, end in pairwise(cuts):
+        middle = (start + end) / 2
+        met = [
+            each[bisect_right(begin, middle) - 1]
+            for each, begin in zip(both, starts, strict=True)
+            if bisect_right(begin, middle)
+        ]
+        there = [s for s in met if s.start <= middle <= s.end]
+        if there and end - start > _SHORT:
+            made.append(
+                ShearStretch(
+                    start, end, min(s.V_r for s in there), min(s.V_s for s in there),
+                    min(s.theta for s in there),
+                )
+            )  # fmt: skip
+    return tuple(made)
 
 
 def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ...]:
