@@ -458,3 +458,26 @@ def test_a_moment_at_a_free_end_is_refused(tmp_path: Path) -> None:
     supports = ["free", "wall 300 mm, fixed"]
     found = refused(lambda: start(spans=["8 m"], supports=supports, forces_csv=path))
     assert "M is -20 kN.m at support 1, which is given as a free end" in found[0]
+
+
+def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) -> None:
+    """One span of 7 m at 12 kN/m: V falls by 84 kN, M = 42*x - 6*x**2.
+
+    Slab 24*0.14*3.1 = 10.416, web 24*0.38*0.48 = 4.3776, superimposed 1.8*3.1 = 5.58: w_D =
+    20.3736 kN/m; w_L = 4.8*3.1 = 14.88 kN/m. 1.25D + 1.5L:
+    7*(1.25*20.3736 + 1.5*14.88) = 334.51 kN.
+    """
+    rows = [
+        f"1,{x / 2},all,1.25D+1.5L,{42 * x / 2 - 6 * (x / 2) ** 2},{42 - 6 * x}" for x in range(15)
+    ]
+    header = "span,station (m),case,combination,M (kN.m),V (kN)"
+    entries = analysed(
+        spans=["7 m"], supports=["column 450 mm"] * 2,
+        forces_csv=frame_files.write(tmp_path / "frame.csv", rows, header),
+    ).sheet.entries_of("analysis")  # fmt: skip
+
+    check = entries["imported-load-1"]
+    assert not check
+    assert entries["W_f1"].value == pytest.approx(84e3)
+    assert entries["W_d1"].value == pytest.approx(334.51e3, abs=10)
+    assert check.value == pytest.approx((0.9 * 334.51e3, 84e3), abs=10)

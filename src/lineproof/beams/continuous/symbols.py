@@ -47,6 +47,7 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"R_\d+(D|S|L\d*|Lst\d*)", "kN"),
         (r"R_m\d+(L|Lst)|R_u\d+", "kN"),
         (r"[RW]_p\d+(D|S|L\d*|Lst\d*)", "kN"),
+        (r"W_[df]\d+", "kN"),
         (r"F_\d+[ab](D|S|L\d+|Lst\d+)", "kN.m2"),
         (r"x_[ijs]", "m"),
         (r"[MT]_[ij]", "kN.m"),
@@ -95,6 +96,16 @@ def stated(
 
 
 @lru_cache(maxsize=8192)
+def stated_check(text: str, unit: str, *, title: str, yes: str, no: str, key: str) -> Criterion:
+    """Return a criterion written for one beam, its units proved."""
+    made = criterion(
+        text, unit=unit, title=title, clause="statics", basis=MECHANICS, yes=yes, no=no, key=key,
+        system="kN-m", notation=NOTATION,
+    )  # fmt: skip
+    prove_criterion(made, {name: unit_of(name) for name in made.names})
+    return made
+
+
 def required(
     text: str, unit: str, *, title: str, yes: str, key: str, clause: str = "statics"
 ) -> Criterion:
