@@ -69,6 +69,11 @@ NOT_COVERED = (
         "clause": "9.3.3",
     },
     {
+        "check": "Bottom bars developed at the faces of supports, where the imported forces make "
+        "the beam resist lateral loads",
+        "clause": "12.11.2",
+    },
+    {
         "check": "Reactions by load type: to be taken from the frame analysis",
         "clause": "NBC 4.1.3.2",
     },
