@@ -315,6 +315,9 @@ def _loads_not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     """Return what certain loads would ask for beyond what is calculated."""
     own = inputs.forces_file is None
     rows: list[Mapping[str, str]] = []
+    if own and inputs.construction_load is not None:
+        what = "Strength under the construction load: it counts for deflections alone"
+        rows.append({"check": what, "clause": "NBC 4.1.3.2"})
     if any(load.form == "point" for load in inputs.loads):
         what = "Hanger stirrups where beams carried from the side bring in point loads"
         rows.append({"check": what, "clause": "11.2.12"})
