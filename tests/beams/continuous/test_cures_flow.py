@@ -205,6 +205,15 @@ def test_the_depth_told_for_a_deflection_holds_in_the_flow() -> None:
     assert check(checked(calls, **bars, **lighter(h=h, h_before=450.0)), entry)
     assert not check(checked(calls, **bars, **lighter(h=h - 10, h_before=450.0)), entry)
     assert "No number of bars 25M in one layer" in note(shallow, "deflection-1")
+    assert "chosen anew" not in note(shallow, "deflection-1")
+
+
+def test_a_cure_of_a_deflection_says_that_open_bars_are_chosen_anew() -> None:
+    """A deeper beam needs fewer bars: with those it may bend as much as before."""
+    shallow = sheet_of((*FLEXURE, "deflections"), h="420 mm", superimposed="1.2 kPa")
+
+    assert not check(shallow, "deflection-1/deflection-attached")
+    assert "bars left open are chosen anew" in note(shallow, "deflection-1")
 
 
 # -- anchorage -------------------------------------------------------------------------------

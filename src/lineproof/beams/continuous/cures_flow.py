@@ -44,6 +44,11 @@ NOT_SOUGHT = (
     "among them."
 )
 NONE_CROSS = "Bars are needed where none count; how many, the check of the moment there says."
+CHOSEN_ANEW = (
+    "It was found with the bars and the weight as they are here: bars left open are chosen anew "
+    "when a value is typed in, and a larger beam weighs more. Give these bars with it, and look at "
+    "the check again."
+)
 COLUMNS = [
     "Place",
     "Check that fails",
@@ -91,7 +96,18 @@ def _title(check: Entry) -> str:
 def cure_text(design: Design, check: Entry, found: Found) -> str:
     """Return in a sentence what would cure a check that fails; plainly where nothing is known."""
     made = _once(design, check, found)
-    return told(made) if made else _why_none(check)
+    return _reminded(design, check, told(made), made) if made else _why_none(check)
+
+
+def _reminded(design: Design, check: Entry, text: str, made: Iterable[Cure]) -> str:
+    """Return cures of a deflection with what they need: the bars that they were found with.
+
+    A stiffer beam asks for fewer bars, and with those it may bend as much as before.
+    """
+    open_bars = check.source in _DEFLECTIONS and not design.model.inputs.bars_given
+    if not open_bars or all(cure.value is None for cure in made):
+        return text
+    return f"{text}{'' if text.endswith('.') else '.'} {CHOSEN_ANEW}"
 
 
 def _why_none(check: Entry) -> str:
@@ -158,8 +174,11 @@ def _briefly(design: Design, check: Entry, found: Found) -> str:
     """
     if found.tried is None:
         return ""
-    able = [cure.text for cure in _once(design, check, found) if cure.value is not None]
-    return lettered(able) if able else cure_text(design, check, found)
+    made = _once(design, check, found)
+    able = [cure.text for cure in made if cure.value is not None]
+    if not able:
+        return cure_text(design, check, found)
+    return _reminded(design, check, lettered(able), made)
 
 
 # -- stirrups where there are none -----------------------------------------------------------
