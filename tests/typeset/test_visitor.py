@@ -230,3 +230,14 @@ def test_a_fraction_inside_a_fraction_keeps_its_size() -> None:
 
     assert '<mrow displaystyle="true" scriptlevel="0">' in mathml(math)
     assert marks_of(math)[-1][::2] == ["frac", False, True]
+
+
+def test_a_fraction_beside_a_bar_has_no_second_brackets() -> None:
+    """A product over the solidus needs none; a sum, and a product under it, do."""
+    shown = {text: plain(formula_math(parse_expression(text), NOTATION)) for text in (
+        "a*b/24/c", "(a + b)/24/c", "c/(a/(b*d))",
+    )}  # fmt: skip
+
+    assert list(shown.values()) == [
+        "(a b/24) / c", "((a + b)/24) / c", "c / (a/(b d))",
+    ]  # fmt: skip

@@ -23,7 +23,6 @@ from lineproof.typeset.nodes import (
     Fraction,
     Math,
     Root,
-    Row,
     Scripts,
     Sign,
     Thin,
@@ -50,7 +49,8 @@ class Piece:
     """A typeset subexpression and what its neighbours must know.
 
     ``binding`` tells how tightly its outermost marks hold; ``signed`` that it begins with a
-    minus; ``digit`` that it begins with a digit; ``raisable`` that a power may be set on it bare.
+    minus; ``digit`` that it begins with a digit; ``raisable`` that a power may be set on it bare;
+    ``sides`` are those of a fraction.
     """
 
     math: Math
@@ -58,7 +58,12 @@ class Piece:
     signed: bool = False
     digit: bool = False
     raisable: bool = True
-    fraction: bool = False
+    sides: tuple[Piece, Piece] | None = None
+
+    @property
+    def fraction(self) -> bool:
+        """Tell whether this is a fraction."""
+        return self.sides is not None
 
 
 Leaf = Callable[[str], Piece]
@@ -158,8 +163,8 @@ class _Visitor:
         return Piece(row([first, sign, second]), _PRODUCT, signed, digit)
 
     def _fraction(self, top: Piece, bottom: Piece) -> Piece:
-        sides = [_beside_bar(top), _beside_bar(bottom)]
-        return Piece(Fraction(*sides), digit=top.digit, raisable=False, fraction=True)
+        math = Fraction(_beside_bar(top), _beside_bar(bottom))
+        return Piece(math, digit=top.digit, raisable=False, sides=(top, bottom))
 
     def _power(self, base: Piece, exponent: Tree) -> Piece:
         index = _root_index(exponent)
@@ -189,13 +194,13 @@ def _beside_bar(piece: Piece) -> Math:
 
     A bar over a bar would be read by its length alone.
     """
-    if not isinstance(piece.math, Fraction):
+    if piece.sides is None:
         return piece.math
-    top, bottom = (
-        Fence(side) if isinstance(side, Row) else side
-        for side in (piece.math.top, piece.math.bottom)
-    )
-    return Fence(row([top, Sign("/", "comma"), bottom]))
+    top, bottom = piece.sides
+    # A product over the solidus is read as a whole, one under it is not.
+    above = _fenced(top) if top.binding == _SUM or top.fraction else top.math
+    below = bottom.math if bottom.binding == _CLOSED and not bottom.fraction else _fenced(bottom)
+    return Fence(row([above, Sign("/", "comma"), below]))
 
 
 def _raised(below: Math, above: Math) -> Math:
