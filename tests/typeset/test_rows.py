@@ -112,6 +112,14 @@ def test_a_failed_comparison_is_true_as_printed() -> None:
     assert not row.holds
 
 
+def test_a_number_that_was_asked_for_prints_its_unit() -> None:
+    """No substitution follows that would tell in which unit 750 is."""
+    made = criterion("h > 750", "620", "750", holds=False, h="620")
+    row = printed_row(entry("decision", **made), NOTATION)
+
+    assert texts(row) == ["asked: h > 750 mm", "h = 620 mm <= 750 mm"]
+
+
 def test_an_expression_prints_in_three_lines() -> None:
     """Criterion, substitution, both values."""
     made = criterion("2*a <= h_f", "52.2", "140", holds=True, a="26.1", h_f="140")

@@ -56,23 +56,27 @@ def criterion_chains(entry: Entry, notation: Notation) -> tuple[Chain, ...]:
 
     Two plain names or numbers give one chain, a = 26.1 mm ≤ h_f = 140 mm. Otherwise three: the
     criterion, the substitution, both values. When the criterion does not hold, the values stand
-    with the opposite sign, and the criterion stands first as what was asked for.
+    with the opposite sign, and the criterion stands first as what was asked for; a plain number
+    of it then has its unit, since beside a plain name no substitution follows.
     """
     left, sign, right = parse_criterion(entry["formula"])
     asked = RELATIONS[sign]
     true = asked if entry["holds"] else RELATIONS[OPPOSITE[sign]]
     simple = isinstance(left, Name | Number) and isinstance(right, Name | Number)
     chains = []
+    values = _values(entry)
     if not (simple and entry["holds"]):
-        sides = formula_math(left, notation), formula_math(right, notation)
+        first, second = (
+            value if simple and isinstance(side, Number) else formula_math(side, notation)
+            for side, value in zip((left, right), values, strict=True)
+        )
         lead = "" if entry["holds"] else "asked"
-        chains.append(Chain(sides[0], (row([asked, sides[1]]),), lead))
+        chains.append(Chain(first, (row([asked, second]),), lead))
     if simple:
         return (*chains, _named_values(entry, left, true, right, notation))
     numbers = [
         substitution_math(side, entry["printed"]["args"], notation) for side in (left, right)
     ]
-    values = _values(entry)
     if numbers != [number_math(entry["printed"][side]) for side in ("left", "right")]:
         chains.append(_compared(numbers[0], true, numbers[1]))
     return (*chains, _compared(values[0], true, values[1]))
