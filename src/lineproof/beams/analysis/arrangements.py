@@ -23,6 +23,8 @@ from lineproof.standards.nbc.combinations import CASES, Case, Companion
 LIVE = ("L", "L_st")
 """Load types placed by arrangement; ``L_st`` is live load of storage, equipment and the like."""
 LOAD_TYPES = ("D", "L", "L_st", "S", "W", "E")
+PRINTED = {"L_st": "L (storage)"}
+"""How a load type is printed where its letter alone does not name it."""
 _TYPES_OF = {"L": LIVE}
 """Load types that stand behind a letter of the table."""
 TOGETHER = ("E",)
@@ -131,6 +133,8 @@ def factored_combinations(kinds: Iterable[str]) -> tuple[Combination, ...]:
 
     >>> [c.name for c in factored_combinations(["D", "L"])]
     ['1.4D', '1.25D + 1.5L', '0.9D + 1.5L']
+    >>> factored_combinations(["D", "L_st"])[1].name
+    '1.25D + 1.5L (storage)'
     """
     return _combinations(CASES, "NBC 4.1.3.2", kinds)
 
@@ -187,8 +191,8 @@ def _companion(companion: Companion, present: Sequence[str]) -> dict[str, float]
 
 
 def _sum_of(factors: Sequence[tuple[str, float]]) -> str:
-    """Write a combination as a sum: ``1.25D + 1.5L``."""
-    texts = ((kind, f"{factor:.12g}") for kind, factor in factors)
+    """Write a combination as a sum: ``1.25D + 1.5L``; storage in words: ``1.5L (storage)``."""
+    texts = ((PRINTED.get(kind, kind), f"{factor:.12g}") for kind, factor in factors)
     return " + ".join(f"{text if '.' in text else text + '.0'}{kind}" for kind, text in texts)
 
 

@@ -143,7 +143,7 @@ class _Pen:
 
 
 def _title(kind: str, name: str) -> Runs:
-    title: Runs = ((kind, "bold"),)
+    title: Runs = ((kind.partition("_")[0], "bold"),)
     return (*title, (f"  {name}", "roman")) if name else title
 
 
