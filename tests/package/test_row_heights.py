@@ -7,6 +7,9 @@ import json
 
 import pytest
 
+from lineproof.beams.continuous.summary_tables import FLEXURE, FLEXURE_WIDTHS, SHEAR, SHEAR_WIDTHS
+from lineproof.beams.continuous.summary_torsion import TORSION, TORSION_WIDTHS
+from lineproof.package.environment import _text_size
 from lineproof.package.pdf import PrintError, compile_pdf
 from lineproof.package.row_heights import PAPER, row_heights, table_heights, widest
 from lineproof.resources import folder
@@ -113,3 +116,21 @@ def test_a_mark_above_an_index_stands_beside_its_letter() -> None:
 
     texts = json.dumps([*formula, ["formula", 3, "moment"]])
     assert compile_pdf(source, texts, DATE).startswith(b"%PDF")
+
+
+@pytest.mark.parametrize(
+    ("columns", "widths"),
+    [(FLEXURE, FLEXURE_WIDTHS), (SHEAR, SHEAR_WIDTHS), (TORSION, TORSION_WIDTHS)],
+)
+def test_a_failing_ratio_runs_into_no_other_column(
+    columns: list[str], widths: tuple[float, ...]
+) -> None:
+    """What the fixed columns of A4 leave holds a ratio that fails and the number of its line."""
+    size = float(_text_size(len(columns) + 1))
+    inset = 2.8 if len(columns) + 1 > 10 else 3.5
+    ratios = [head for head, width in zip(columns, widths, strict=True) if not width]
+    needed = (widest("1.24 FAILS") * size + 2 * inset) * len(ratios)
+    needed += widest("99.99") * size + 2 * inset
+
+    assert columns[-1] in ratios
+    assert sum(widths) + needed * 25.4 / 72 <= PAPER

@@ -29,16 +29,16 @@ from lineproof.record.utilisation import printed_ratio, sides_for_ratio
 from lineproof.standards.a23_3 import crack_control, deflection_stages, flexure, minimum, shear
 
 FLEXURE = ["Place", "Load case", "M_f, kN.m", "A_sr, mm2", "Bars", "A_s, mm2", "M_r, kN.m", "Ratio"]
-FLEXURE_WIDTHS = (24.0, 44.0, 14.0, 14.0, 36.0, 14.0, 14.0, 0.0)
+FLEXURE_WIDTHS = (23.0, 41.0, 13.0, 13.0, 30.0, 13.0, 13.0, 0.0)
 SHEAR = ["Place", "Load case", "Stirrups", "V_f, kN", "V_c, kN", "V_s, kN", "V_r, kN", "Ratio"]
-SHEAR_WIDTHS = (26.0, 46.0, 24.0, 14.0, 14.0, 14.0, 14.0, 0.0)
+SHEAR_WIDTHS = (28.0, 42.0, 20.0, 13.0, 13.0, 13.0, 13.0, 0.0)
 SERVICE = ["Place", "Check", "Demand", "Limit", "Ratio"]
 PAIR = 2
 NONE = "–"
 """A cell of numbers where there is none."""
 _DIGITS = 3
 """Digits that a value of a summary shows at least."""
-SERVICE_WIDTHS = (40.0, 62.0, 24.0, 24.0, 14.0)
+SERVICE_WIDTHS = (32.0, 62.0, 24.0, 24.0, 0.0)
 
 
 @dataclass(frozen=True, eq=False, slots=True)

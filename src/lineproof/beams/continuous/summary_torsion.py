@@ -14,7 +14,7 @@ TORSION = [
     "Place", "Load case", "T_f, kN.m", "Threshold, kN.m", "Design, kN.m", "a_v, mm2/m",
     "a_t, mm2/m", "Legs, mm2/m", "Stirrups", "Section", "Bars",
 ]  # fmt: skip
-TORSION_WIDTHS = (27.0, 28.0, 12.0, 15.0, 13.0, 13.0, 13.0, 13.0, 13.0, 13.0, 13.0)
+TORSION_WIDTHS = (22.0, 24.0, 11.0, 15.0, 12.0, 11.0, 11.0, 11.0, 0.0, 0.0, 0.0)
 TITLE = "Torsion with shear: from where it counts, closed stirrups, section and bars"
 _PER_METRE = 1000.0
 _QUARTER = 4.0
