@@ -3,18 +3,20 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from dataclasses import dataclass, field
 
 from lineproof.beams.bars import spaced
 from lineproof.beams.continuous.anchorage import Bar, bar_of
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
 from lineproof.beams.continuous.beside import Row, crowded, layer_with, tightest
-from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import level_pairs
+from lineproof.beams.continuous.layout import BarRun, BeamOutline
+from lineproof.beams.continuous.resistance import level_pairs, span_at
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
-from lineproof.record import Entry
 from lineproof.standards.a23_3 import bars as bar_clause
 from lineproof.standards.a23_3 import laps
+
+Place = tuple[str, int]
 
 _CLASS = "Both bars are spliced at one place: class B."
 _CLASS_UNLIKE = (
@@ -24,6 +26,26 @@ _CLASS_UNLIKE = (
 _AT_LAP = "bars of the layer where most stand along the lap, two that are lapped as one"
 
 
+@dataclass(frozen=True, slots=True)
+class _Lap:
+    """A kind of lap: the thinner and the thicker bar, its length [mm], the tightest row there.
+
+    ``places`` are all that have such a lap.
+    """
+
+    thin: BarRun
+    thick: BarRun
+    length: float
+    row: Row
+    places: list[Place] = field(default_factory=list)
+
+    @property
+    def title(self) -> str:
+        """What is lapped, and where."""
+        other = f" with {self.thick.size}" if self.thin.size != self.thick.size else ""
+        return f"Lap of {self.thin.face} bars {self.thin.size}{other}, {listed(self.places)}"
+
+
 def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
     """Record every kind of lap in a part: size, length against what is laid, room for concrete."""
     designed, kept = writers.designed, tuple(r for r in runs if r.place != "side face")
@@ -31,19 +53,18 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         (kept[i], kept[j])
         for i, j in sorted(level_pairs(designed.outline, kept), key=lambda p: kept[p[1]].start)
     ]
-    seen: set[tuple[Bar, Bar, float, int, int, Bar]] = set()
+    found: dict[tuple[Bar, Bar, float, int, int, Bar], _Lap] = {}
     for first, second in pairs:
         thin, thick = sorted((first, second), key=lambda run: run.diameter)
         length = first.end - second.start
-        layer = layer_with(designed, kept, first)
-        row = tightest(designed.basis, layer, second.start, first.end)
+        row = tightest(designed.basis, layer_with(designed, kept, first), second.start, first.end)
         widest = bar_of(designed, row.thickest)
         sizes = (bar_of(designed, thin), bar_of(designed, thick))
         same = (*sizes, length, row.number, row.lapped, widest)
-        if same not in seen:
-            seen.add(same)
-            laid = (length, row, lengths[widest]["d_b"])
-            _record_lap(writers, lengths, (thin, thick), laid, len(seen))
+        lap = found.setdefault(same, _Lap(thin, thick, length, row))
+        lap.places.append(_place(designed.outline, (first.end + second.start) / 2))
+    for number, lap in enumerate(found.values(), start=1):
+        _record_lap(writers, lengths, lap, number)
 
 
 def record_crowded(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
@@ -61,22 +82,39 @@ def record_crowded(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -
             steps.check(bar_clause.FITS)
 
 
-def _record_lap(
-    writers: Writers,
-    lengths: Lengths,
-    sizes: tuple[BarRun, BarRun],
-    laid: tuple[float, Row, Entry],
-    number: int,
-) -> None:
+def _place(outline: BeamOutline, middle: float) -> Place:
+    """Return the support over which a lap is centred, else the span, with its number."""
+    for number, (axis, support) in enumerate(zip(outline.axes, outline.supports, strict=True), 1):
+        if abs(middle - axis) <= support.half:
+            return "support", number
+    return "span", span_at(outline, middle)
+
+
+def listed(places: Iterable[Place]) -> str:
+    """Name places once each.
+
+    >>> listed([("span", 3), ("span", 1), ("support", 2)])
+    'spans 1, 3 and support 2'
+    """
+    numbers: dict[str, dict[int, None]] = {}
+    for word, number in sorted(places):
+        numbers.setdefault(word, {})[number] = None
+    return " and ".join(
+        f"{word}{'s' if len(found) > 1 else ''} {', '.join(map(str, found))}"
+        for word, found in numbers.items()
+    )
+
+
+def _record_lap(writers: Writers, lengths: Lengths, lap: _Lap, number: int) -> None:
     """Record a lap of a thinner with a thicker bar: its length, bars that stand beside.
 
     The distances are those of bars that all have the size of the thickest in the layer.
     """
     sheet, designed = writers.sheet, writers.designed
-    (thin, thick), (length, row, d_b) = sizes, laid
+    thin, thick, row = lap.thin, lap.thick, lap.row
+    d_b = lengths[bar_of(designed, row.thickest)]["d_b"]
     unlike = thin.size != thick.size
-    other = f" with {thick.size}" if unlike else ""
-    with sheet.part(f"anchorage-lap-{number}", f"Lap of {thin.face} bars {thin.size}{other}"):
+    with sheet.part(f"anchorage-lap-{number}", lap.title):
         place, larger = lengths[bar_of(designed, thin)], lengths[bar_of(designed, thick)]
         steps = Steps(sheet, place)
         sheet.note(
@@ -89,7 +127,7 @@ def _record_lap(
         steps.check(laps.LAPPABLE, d_b=larger["d_b"])
         if unlike:
             steps.line(laps.TWO_SIZES, l_sn=place["l_s"], l_dk=larger["l_d"])
-        provided = sheet.given("l_lp", plain(length, "mm"), source="as laid")
+        provided = sheet.given("l_lp", plain(lap.length, "mm"), source="as laid")
         steps.bind(l_lp=provided)
         steps.check(laps.LONG_ENOUGH)
         steps.bind(d_b=larger["d_b"])
