@@ -74,6 +74,32 @@ def test_a_check_that_does_not_hold_is_never_told_short() -> None:
     assert told(record) == {"3.1": "2.1", "3.2": "2.2"}
 
 
+def test_a_long_note_is_printed_once() -> None:
+    """The second names the part of the first; a short one, or one beside a failure, stands whole.
+
+    The sentence has 126 letters, a line of print about 100; 1.5 x 140 is more than 200 kN.m.
+    """
+    long = "The bars run through the support, " * 3 + "and end in the span."
+
+    def record(moment: str) -> Record:
+        made = record_of(["90 kN.m", moment])
+        for part in made["parts"][1:]:
+            part["entries"].append(part["entries"][-1] | {"id": f"{part['key']}/n", "text": long})
+        return made
+
+    blocks = build_package([record("90 kN.m")]).calcs[0].blocks
+    notes = [
+        (same.row.text, same.id, same.label)
+        for block in blocks
+        if isinstance(block, PartBlock)
+        for group in block.groups
+        for same in group.repeated
+        if same.row.kind == "note"
+    ]
+    assert notes == [(long, "span-1/n", "part 2")]
+    assert "" not in told(record("140 kN.m"))
+
+
 def test_a_marked_line_is_worked_where_it_stands() -> None:
     """A note beside a line needs the line."""
     record = record_of(["90 kN.m", "90 kN.m"])

@@ -311,7 +311,7 @@ class _Builder:
             label=part.get("label", ""),
             title=part.get("title", ""),
             rows=rows,
-            groups=worked.groups(part["entries"], rows),
+            groups=worked.groups(part["entries"], rows, part.get("label", "")),
         )
 
 

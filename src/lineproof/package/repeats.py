@@ -3,7 +3,9 @@
 A beam that is alike on both sides is worked twice in the record, since each line rests on entries
 of its own. On paper the second working would tell nothing new: where formula, clause, printed
 numbers and result of a line are those of an earlier line, its result stands with the number of
-that line. Nothing is left out of the record, and every line keeps its label and its anchor.
+that line. A note longer than a line of print that stands word for word in an earlier part names
+that part, except beside a check that fails. Nothing is left out of the record, and every line keeps
+its label and its anchor.
 """
 
 from __future__ import annotations
@@ -22,6 +24,8 @@ Entry = Mapping[str, Any]
 _SAME = 1e-9
 _SORTED = json.JSONEncoder(sort_keys=True)
 _REPEATABLE = frozenset({"given", "lookup", "line", "found", "decision", "check"})
+_LONG_NOTE = 110
+"""More letters than stand on one line of print."""
 _NUMBERS = ("value", "left", "right", "utilisation")
 _OWN = frozenset({"id", "label", "title", "digest", "args", "closing", *_NUMBERS})
 """What of an entry is its own, or is compared apart."""
@@ -29,7 +33,10 @@ _OWN = frozenset({"id", "label", "title", "digest", "args", "closing", *_NUMBERS
 
 @dataclass(frozen=True, slots=True)
 class Repeated:
-    """A line, and id and label of the earlier one whose working it repeats."""
+    """A line, and id and label of the earlier one whose working it repeats.
+
+    The label of a note without a number is that of its part: ``part 44``.
+    """
 
     row: PrintedRow
     id: str
@@ -50,17 +57,26 @@ class Worked:
     def __init__(self, marked: Iterable[str]) -> None:
         """Begin with nothing; lines with one of the ids ``marked`` are always worked."""
         self._marked = frozenset(marked)
-        self._lines: dict[str, Entry] = {}
+        self._lines: dict[str, tuple[Entry, str]] = {}
 
-    def groups(self, entries: Sequence[Entry], rows: Sequence[PrintedRow]) -> tuple[Group, ...]:
-        """Return the rows of the next part in order, those that repeat earlier parts apart."""
-        keys = [self._key(entry) for entry in entries]
+    def groups(
+        self, entries: Sequence[Entry], rows: Sequence[PrintedRow], label: str = ""
+    ) -> tuple[Group, ...]:
+        """Return the rows of the next part in order, those that repeat earlier parts apart.
+
+        ``label`` is that of the part.
+        """
+        fails = any(entry["kind"] == "check" and not entry["holds"] for entry in entries)
+        keys = [
+            self._note_key(entry, fails) if entry["kind"] == "note" else self._key(entry)
+            for entry in entries
+        ]
         told = [
             self._told(entry, row, key) for entry, row, key in zip(entries, rows, keys, strict=True)
         ]
         for entry, key in zip(entries, keys, strict=True):
             if key:
-                self._lines.setdefault(key, entry)
+                self._lines.setdefault(key, (entry, entry.get("label") or f"part {label}"))
         return tuple(_grouped(told))
 
     def _key(self, entry: Entry) -> str:
@@ -74,11 +90,19 @@ class Worked:
             | {"closing": {name: closing[name] for name in closing if name not in _OWN}}
         )
 
+    def _note_key(self, entry: Entry, fails: bool) -> str:  # noqa: FBT001 - told in one place
+        """Return what a long note says, "" for one that is short or stands beside a failure."""
+        if fails or entry["id"] in self._marked or len(entry["text"]) <= _LONG_NOTE:
+            return ""
+        return _SORTED.encode(
+            {name: entry[name] for name in entry if name not in ("id", "label", "digest")}
+        )
+
     def _told(self, entry: Entry, row: PrintedRow, key: str) -> PrintedRow | Repeated:
         seen = self._lines.get(key) if key else None
-        if seen is None or not _same_numbers(entry, seen):
+        if seen is None or not _same_numbers(entry, seen[0]):
             return row
-        return Repeated(row, seen["id"], seen["label"])
+        return Repeated(row, seen[0]["id"], seen[1])
 
 
 def _same_numbers(one: Entry, other: Entry) -> bool:
