@@ -6,7 +6,13 @@ from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.cutoff import Point, no_further_need
 from lineproof.beams.continuous.cutoff_ends import Ending, Runs, passes
 from lineproof.beams.continuous.cutoff_need import Need
-from lineproof.beams.continuous.cutoff_record import Site, ends_before, record_extension, thickest
+from lineproof.beams.continuous.cutoff_record import (
+    INFLECTION,
+    Site,
+    ends_before,
+    record_extension,
+    thickest,
+)
 from lineproof.beams.continuous.cutoff_sets import grouped, record_area, text_of
 from lineproof.beams.continuous.numbers import holds
 from lineproof.beams.steps import Steps
@@ -90,14 +96,14 @@ def _fail_inflection(site: Site) -> None:
 
 
 def _source(site: Site, point: Point) -> str:
-    return f"point of inflection, {site.writers.designed.forces.cases[point.row]}"
+    return f"found along the span, {site.writers.designed.forces.cases[point.row]}"
 
 
 def _record_extension(site: Site, point: Point) -> None:
     """Record inside the open part how far the longest bars pass the point of inflection."""
     side = site.side
     steps = Steps(site.writers.sheet, site.section)
-    steps.bind(x_t=site.given("x_t", point.t, _source(site, point)))
+    steps.bind(x_t=site.given("x_t", point.t, _source(site, point), INFLECTION))
     need = Need(side.span, side.near, point, behind=False)
     past = record_extension(site, steps, need, side.t_kept, side.kept)
     _record_length(past)
@@ -133,7 +139,7 @@ def _record_with(site: Site, point: Point, further: tuple[Ending, ...]) -> None:
             "bars-text", f"{text_of(runs)} pass the point of inflection.", title="Bars counted"
         )
         steps = Steps(sheet, dict(writers.span(side.span)) | dict(sizes) | site.section)
-        steps.bind(x_t=site.given("x_t", point.t, _source(site, point)))
+        steps.bind(x_t=site.given("x_t", point.t, _source(site, point), INFLECTION))
         shortest = "as laid, the first of them to end"
         steps.bind(x_e=site.given("x_e", ending.t, shortest))
         steps.bind(d_b=site.bar(thickest(runs))["d_b"])

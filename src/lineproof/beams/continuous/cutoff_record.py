@@ -35,6 +35,9 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.references import MECHANICS
 
+NO_FURTHER_NEED = "Point of no further need, from the near support axis"
+INFLECTION = "Point of inflection, from the near support axis"
+ZERO_AT_AXIS = "Support axis, where the moment is zero"
 _NONE = (
     "No bars go on: the bars may end only where no load case brings tension to the {face}, and "
     "past it."
@@ -72,9 +75,11 @@ class Site:
         x = local(self.writers.designed, side.span, side.near, t)
         return self.writers.designed.forces.demand(side.span, x, side.near, row)
 
-    def given(self, symbol: str, t: float, source: str = "as laid, lapped bars as one") -> Entry:
-        """Record a distance from the near axis."""
-        return self.writers.sheet.given(symbol, plain(t, "mm"), source=source)
+    def given(
+        self, symbol: str, t: float, source: str = "as laid, lapped bars as one", title: str = ""
+    ) -> Entry:
+        """Record a distance from the near axis; "" for the title that the symbol has."""
+        return self.writers.sheet.given(symbol, plain(t, "mm"), title, source=source)
 
     def bar(self, run: BarRun) -> Mapping[str, Entry]:
         """Return the recorded development of a run."""
@@ -145,7 +150,7 @@ def _record_point(site: Site, index: int, need: Need) -> None:
     else:
         sheet.note("none-going-on", _NONE.format(face=side.face), title="Bars that go on")
         source = "found along the envelope"
-    steps.bind(x_t=site.given("x_t", need.point.t, source))
+    steps.bind(x_t=site.given("x_t", need.point.t, source, NO_FURTHER_NEED))
     x = local(designed, need.span, need.near, need.point.t)
     demand = designed.forces.demand(need.span, x, need.near, need.point.row)
     site.writers.forces(steps, demand, need.near, steps.entry("x_t"))

@@ -17,7 +17,7 @@ from lineproof.beams.continuous.cutoff import (
     support_of,
 )
 from lineproof.beams.continuous.cutoff_ends import Runs, inflection, tip
-from lineproof.beams.continuous.cutoff_record import Site, thickest
+from lineproof.beams.continuous.cutoff_record import INFLECTION, ZERO_AT_AXIS, Site, thickest
 from lineproof.beams.continuous.cutoff_sets import (
     begin,
     grouped,
@@ -138,7 +138,7 @@ def record_zero_moment(site: Site, hooked: Hooks) -> None:
     title = f"{site.title}: at the point of inflection near support {support}"
     with site.writers.sheet.part(f"{site.key}-zero", title):
         steps = _kept(site)
-        steps.bind(x_t=site.given("x_t", point.t, "point of inflection, found along the span"))
+        steps.bind(x_t=site.given("x_t", point.t, "found along the span", INFLECTION))
         demand = site.demand(point.t, point.row)
         site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
         steps.bind(x_e=site.given("x_e", side.t_kept))
@@ -158,7 +158,7 @@ def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
         steps = _kept(site)
         x = 0.0 if side.near == "left" else designed.outline.lengths[side.span - 1]
         _, V = designed.forces.pairs(side.span, x, "right" if side.near == "left" else "left")
-        steps.bind(x_t=site.given("x_t", 0.0, "support axis"))
+        steps.bind(x_t=site.given("x_t", 0.0, title=ZERO_AT_AXIS))
         demand = site.demand(0.0, int(np.abs(V).argmax()))
         site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
         half = half_of(designed, side.span, side.near)
