@@ -347,7 +347,7 @@ def test_ends_held_by_columns_or_spandrels() -> None:
     ("beam", "loads", "words"),
     [
         (Beam((Span(8000, 8e13),), (WIDE,) * 2), UNIFORM[:2], "one span only"),
-        (THREE, UNIFORM, "spans 1 and 2 differ by 1.21, more than 1.2"),
+        (THREE, UNIFORM, "of spans 1 and 2 the longer is 1.21 times the shorter, more than 1.2"),
         (Beam((Span(8e3, 8e13), Span(8e3, 9e13)), (WIDE,) * 3), UNIFORM[:4], "EI is not the same"),
         (Beam((Span(8000, 8e13),) * 2, (WIDE, WIDE, FREE)), UNIFORM[:4], "span 2 is a cantilever"),
         (

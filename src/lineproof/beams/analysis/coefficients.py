@@ -67,7 +67,10 @@ def conditions(beam: Beam, loads: Iterable[Load], factors: Mapping[str, float]) 
     for number, (a, b) in enumerate(pairwise(beam.spans), start=1):
         ratio = max(a.length, b.length) / min(a.length, b.length)
         if ratio > LONGEST_RATIO * (1 + 1e-12):
-            failed.append(f"spans {number} and {number + 1} differ by {ratio:.3g}, more than 1.2")
+            failed.append(
+                f"of spans {number} and {number + 1} the longer is {ratio:.3g} times the shorter, "
+                "more than 1.2"
+            )
     if len({span.EI for span in beam.spans}) > 1:
         failed.append("EI is not the same in all spans")
     failed += [

@@ -26,8 +26,8 @@ _NOTE = (
     "reach past the web and into the overhang by their development length."
 )
 _RESTRAINED = (
-    "The assumed moment of restraint w l²/n falls off by the shear w l/2 at the end: it is zero "
-    "2 l/n from the axis of the support."
+    "The assumed moment of restraint, wℓ²/n, decreases by the shear at the end, wℓ/2: it is zero "
+    "2ℓ/n from the axis of the support."
 )
 
 
@@ -40,7 +40,7 @@ class SlabBars:
     spacing: float
 
     def __str__(self) -> str:
-        layers = "" if self.layers == 1 else f"{self.layers} x "
+        layers = "" if self.layers == 1 else f"{self.layers} × "
         return f"{layers}{self.size} at {self.spacing:g} mm"
 
 
@@ -48,7 +48,7 @@ def read_slab_bars(name: str, text: object) -> SlabBars:
     """Read the transverse bars of the slab; raises :class:`UserError` that says how to write them.
 
     >>> str(read_slab_bars("slab_bars", "2 x 10M at 250 mm"))
-    '2 x 10M at 250 mm'
+    '2 × 10M at 250 mm'
     """
     match = _SLAB_BARS.match(str(text))
     if match is None:
@@ -141,7 +141,7 @@ def record_restrained_length(steps: Steps, share: float) -> None:
 
 
 def record_interface(steps: Steps, slab: SlabBars, *, block_in_web: bool) -> None:
-    """Record inside the open part the plane between flange and web in sagging moment.
+    """Record inside the open part the plane between flange and web where the moment is positive.
 
     Needs ``A_s`` (bottom bars), ``b`` (flange), b_o, b_w, h_f and l_vf in place, and C_f where the
     stress block reaches into the web. The bars are taken at yield.
