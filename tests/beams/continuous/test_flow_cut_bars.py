@@ -75,7 +75,7 @@ def test_a_bar_cut_shorter_is_found() -> None:
     assert all(text.startswith("span 2, bottom, 1") for text in told)
     assert "coverage-bottom/strength" in found.record.failed
     notes = [e for e in found.record.entries.values() if e["id"].startswith("coverage/gap")]
-    assert {note["title"] for note in notes} == {"NOT covered"}
+    assert {note["title"] for note in notes} == {"Stretch that fails"}
     assert any(note["text"].startswith("Not enough bottom bars, span 2, ") for note in notes)
 
 

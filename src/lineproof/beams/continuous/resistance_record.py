@@ -38,6 +38,10 @@ from lineproof.record import Entry
 
 SHOWN = 11
 """Stations a span in the table, evenly spaced between the faces."""
+STATIONS = [
+    "Span", "x, m", "M_f positive, kN.m", "M_r positive, kN.m", "Ratio",
+    "M_f negative, kN.m", "M_r negative, kN.m", "Ratio",
+]  # fmt: skip
 METHOD = (
     "Every bar counts in proportion to the distance from its end, in full from its development "
     "length on; a hook from its outside over its own length; like bars that are lapped count as "
@@ -108,16 +112,16 @@ def _record_table(
         sheet.note("method", method, title="Method", clause="11.3.9")
         sheet.table(
             "stations",
-            ["Span", "x, m", "M bottom", "Mr bottom", "ratio", "M top", "Mr top", "ratio"],
+            STATIONS,
             [row for k in range(1, len(writers.designed.outline.lengths) + 1)
              for row in _rows(writers, standing, k)],
-            title="Moments in kN.m against the resistance as detailed; ratio: moment or tension",
+            title="Factored moments and resistance as detailed; ratio: of moment or tension",
             rests_on=_checks(writers),
         )  # fmt: skip
         if writers.designed.restrained:
             sheet.note("restraint", left_out(writers.designed.restrained), title="Restraint")
         for number, gap in enumerate(found.gaps, 1):
-            sheet.note(f"gap-{number}", f"{gap}.", title="NOT covered")
+            sheet.note(f"gap-{number}", f"{gap}.", title="Stretch that fails")
 
 
 def _checks(writers: Writers) -> list[Entry]:
