@@ -46,9 +46,7 @@ def record_place(steps: Steps, section: ShearSection) -> Entry:
     """
     _same(steps, "d", section.d)
     face = "bottom" if section.tension == "bottom" else "top"
-    steps.sheet.note(
-        "case", f"Load case: {section.demand.case}. The {face} is in tension.", title="Load case"
-    )
+    steps.sheet.note("case", f"{section.demand.case}. The {face} is in tension.", title="Load case")
     if section.mixed:
         steps.sheet.note("depth", _MIXED, title="Depth", basis=COMMON_PRACTICE)
     steps.line(shear.D_V)
