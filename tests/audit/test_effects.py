@@ -36,7 +36,7 @@ def _record() -> Record:
         sheet.given("M_f", "180 kN.m", "factored moment")
         sheet.given("w_f", "40 kN/m", "factored load")
         sheet.given("w_r", "50 kN/m", "load that the slab brings at most")
-    with sheet.part("sag-2", "Span 2: moment in the span"):
+    with sheet.part("sag-2", "Span 2: positive moment"):
         sheet.given("A_s", "1000 mm2", "steel")
         sheet.given("z_a", "500 mm", "lever arm")
         sheet.line("M_r = 0.85*A_s*f_y*z_a", unit="kN.m", title="Moment resistance")
@@ -179,7 +179,7 @@ def test_a_decision_says_what_was_concluded_and_many_are_counted() -> None:
 @pytest.mark.parametrize(
     ("title", "place"),
     [
-        ("Support 2, left face: moment over the support", "support 2, left face"),
+        ("Support 2, left face: negative moment", "support 2, left face"),
         ("Bottom bars of span 3: end in the tension zone", "span 3"),
         ("Stirrups", "stirrups"),
     ],

@@ -129,7 +129,7 @@ def _turn(node: Node, titles: Mapping[str, str]) -> str:
 def place_of(title: str) -> str:
     """Return the place that the title of a part names.
 
-    >>> place_of("Span 2: moment in the span"), place_of("Shear of span 1 at its left support")
+    >>> place_of("Span 2: positive moment"), place_of("Shear of span 1 at its left support")
     ('span 2', 'span 1 at its left support')
     >>> place_of("Cover for durability and fire")
     'cover for durability and fire'

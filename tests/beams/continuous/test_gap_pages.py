@@ -47,7 +47,7 @@ def test_gaps_stand_first_with_their_place(existing: Existing) -> None:
         assert [each.leads for each in listed] == [True] * 3 + [False] * (len(listed) - 3)
     assert [row[1] for row in entry(existing, "summary/failing")["rows"][:3]] == GAPS
     places = {each.id: each.place for each in calc.failures}
-    assert places["sag-1/strength"] == "Span 1: moment in the span"
+    assert places["sag-1/strength"] == "Span 1: positive moment"
     assert places["coverage-bottom/strength"] == ""  # the title says where
 
 

@@ -222,9 +222,9 @@ class _Lines:
         moment, shear = self._section_terms(x.value)
         V = self.demand.V if self.case.near == "left" else -self.demand.V
         top = self.demand.M < 0
-        face = "top" if top else "bottom"
+        kind = "Negative" if top else "Positive"
         text = _signed(moment, negative=top)
-        self._line(f"M_f = {text}", f"Moment at the section, {face} in tension: {self.title}")
+        self._line(f"M_f = {text}", f"{kind} moment at the section: {self.title}")
         self._line(f"V_f = {_signed(shear, negative=V < 0)}", f"Shear at the section: {self.title}")
 
     def _section_terms(self, x: float) -> tuple[str, str]:

@@ -198,7 +198,7 @@ def _record_sections(steps: Steps, span: SpanEntries) -> None:
         title = "Moment of inertia of the web, not cracked"
         named(steps, flange.INERTIA_RECTANGLE, "I_gw", title, b_w=b_w)
     if span.top is not None:
-        _record_cracked(steps, {"b": b_w, **span.top}, "t", "hogging at midspan")
+        _record_cracked(steps, {"b": b_w, **span.top}, "t", "negative moment at midspan")
     for end, bound in span.ends.items():
         where = "at the root" if span.free else f"at the {('left', 'right')[end == '2']} support"
         if "A_s" in bound:
@@ -270,9 +270,9 @@ def _at_midspan(steps: Steps) -> Entry:
         return _inertia(steps, "m", "M_m", "at midspan", I_g=steps.entry("I_g"))
     before, title = steps.place.get("M_aem"), ""
     if before is not None and before.value < M_m.value:
-        M_m, title = before, "Size of the hogging moment of the earlier stage, which is larger"
+        M_m, title = before, "Size of the negative moment of the earlier stage, which is larger"
     named(steps, stages.HOGGING_SIZE, "M_at", title, M_s=M_m)
-    return _inertia(steps, "t", "M_at", "hogging at midspan", gives="I_em")
+    return _inertia(steps, "t", "M_at", "negative moment at midspan", gives="I_em")
 
 
 def _record_tip(steps: Steps, span: SpanEntries, stage: Stage, sums: tuple[Sums, Sums]) -> None:

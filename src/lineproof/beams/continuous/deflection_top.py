@@ -25,7 +25,7 @@ from lineproof.record import Entry
 from lineproof.standards.a23_3 import deflection, deflection_stages
 
 _NOTE = (
-    "Under service load the moment at midspan is hogging and cracks the section: the top bars are "
+    "Under service load the moment at midspan is negative and cracks the section: the top bars are "
     "in tension. Those count in full that reach past midspan by their development length to both "
     "sides; two bars lapped there count as one. Where bars reach less, their area counts in "
     "proportion."

@@ -90,7 +90,7 @@ def record_sag(design: Design, span: int) -> None:
     model, layers = design.model, design.bottom_bars(span)
     inputs, key = model.inputs, f"sag-{span}"
     counts = _bottom_in_part(design, key, span) if layers else _depth_beside(design, key, span)
-    with model.sheet.part(key, f"Span {span}: moment in the span"):
+    with model.sheet.part(key, f"Span {span}: positive moment"):
         steps, demand = begin(model, span, "b_f" if inputs.slab else "b_w"), model.forces.sag(span)
         near = nearer(model, demand)
         record_forces(steps, model, demand, near, x=at_face(model, demand, near))
@@ -236,7 +236,7 @@ def record_hog(design: Design, support: int) -> None:
     rows.sort(key=lambda face: -hogging(model, face))
     worst: dict[str, Entry] = {}
     for face in rows:
-        title = f"{face.name.capitalize()}: moment over the support"
+        title = f"{face.name.capitalize()}: negative moment"
         if hogging(model, face) <= 0:
             with model.sheet.part(face.key, title):
                 record_no_moment(model, face)

@@ -122,10 +122,10 @@ class _Lines:
             moment += f" + w_f*({at} - x_i)*(x_j - {at})/2"
             shear += f" - w_f*({at} - x_i)"
         top = demand.M < 0
-        face = "top" if top else "bottom"
+        kind = "Negative" if top else "Positive"
         self._line(
             f"M_f = {_signed(moment, negative=top)}",
-            f"Moment at the section, {face} in tension: {demand.case}",
+            f"{kind} moment at the section: {demand.case}",
         )
         self._line(
             f"V_f = {_signed(shear, negative=demand.V < 0)}", f"Shear at the section: {demand.case}"

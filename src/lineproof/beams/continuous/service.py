@@ -119,7 +119,7 @@ class _Lines:
                 self.names[name] = entries[name]
                 terms.append(_times(factor, name))
         text = f"-({' + '.join(terms)})" if terms else "0*w_s*l**2"
-        self._line(f"{symbol} = {text}", "kN.m", f"Hogging moment {where}")
+        self._line(f"{symbol} = {text}", "kN.m", f"Negative moment {where}")
 
     def record_span(self, left: str, right: str, middle: str, load: str) -> None:
         """Record load, hogging moments at both axes and the moment at midspan."""
@@ -179,7 +179,7 @@ class _Lines:
                 self.names |= {name: entries[name], load: self.model.uniform[kind, k]}
                 terms.append(f"{name}/{load}")
         text = f"{symbol} = -({dead} + w_cn*({' + '.join(terms)}))"
-        return self._line(text, "kN.m", f"Hogging moment {where}")
+        return self._line(text, "kN.m", f"Negative moment {where}")
 
     def record_at(self, x: Entry, earlier: Mapping[str, Entry]) -> Entry:
         """Record the moment at a place from the loads and the moments at the axes; its size."""
@@ -199,7 +199,7 @@ class _Lines:
         else:
             terms = self._simple(x.value, load) + self._from_ends(names, known=bool(earlier))
         text = " + ".join(terms).replace("+ -", "-")
-        made = self._line(f"M_s = {text}", "kN.m", "Moment at this place, negative where it hogs")
+        made = self._line(f"M_s = {text}", "kN.m", "Moment at this place, with its sign")
         return made if made.value >= 0 else self.steps.line(HOGGING_SIZE, M_s=made)
 
     def _from_ends(self, names: tuple[str, str], *, known: bool) -> list[str]:

@@ -354,14 +354,16 @@ def _record_interfaces(design: Design) -> None:
     sheet = model.sheet
     for span in (k for k in design.bottom if has_sag(model, k)):
         entries = sheet.entries_of(f"sag-{span}") | bars_of(sheet, f"sag-{span}")
-        with sheet.part(f"interface-{span}", f"Span {span}: flange and web in sagging moment"):
+        with sheet.part(f"interface-{span}", f"Span {span}: flange and web, positive moment"):
             steps = _flange_steps(sheet, model, span)
             steps.bind(**{n: entries[n] for n in ("A_s", "C_f") if n in entries})
             record_length(steps, beside_sag(model.forces, span))
             record_interface(steps, slab, block_in_web="C_f" in entries)
     for face in _faces_with_overhang(model):
         entries = sheet.entries_of(face.key)
-        with sheet.part(f"interface-{face.key}", f"{face.name.capitalize()}: flange and web"):
+        with sheet.part(
+            f"interface-{face.key}", f"{face.name.capitalize()}: flange and web, negative moment"
+        ):
             steps = _flange_steps(sheet, model, face.span)
             steps.bind(n_o=entries["n_o"], A_b=entries.get("A_bo", entries["A_b"]))
             _record_to_inflection(steps, model, face)

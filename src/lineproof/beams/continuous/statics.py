@@ -21,7 +21,8 @@ from lineproof.formula import Symbol
 _SIGNS = (
     "Moments are positive where the bottom is in tension; loads act downward, reactions upward. "
     "Each row of support moments belongs to one load type as specified (not factored): dead load "
-    "and snow on all spans, live load on one span at a time; every case is a sum of these rows."
+    "and snow on all spans, live load on one span at a time; every case is a sum of these rows. In "
+    "checks and deflections a moment is entered by its size, and its title says which sign it has."
 )
 _SAME = "The bending stiffness is taken the same in all spans, so it cancels."
 _GROSS = "Bending stiffness of the gross sections of the spans, with one modulus of elasticity."

@@ -109,13 +109,13 @@ F_R_DEFLECTION = _formula(
 CRACKING_BOTTOM = _formula(
     "M_crd = f_rd*I_g/y_b",
     clause="9.8.2.3",
-    title="Cracking moment for deflections, bottom in tension",
+    title="Cracking moment for deflections, positive bending",
     basis=DEFLECTION_QUOTED,
 )
 CRACKING_TOP = _formula(
     "M_crdn = f_rd*I_g/y_t",
     clause="9.8.2.3",
-    title="Cracking moment for deflections, top in tension",
+    title="Cracking moment for deflections, negative bending",
     basis=DEFLECTION_QUOTED,
 )
 MODULAR_RATIO = _formula("n_E = E_s/E_c", clause="9.8.2.3", title="Modular ratio", basis=MECHANICS)
@@ -177,13 +177,13 @@ MOMENT_SIMPLE = _formula(
 EFFECTIVE = _formula(
     "I_e = min(I_cr + (I_g - I_cr)*(M_crd/M_a)**3, I_g)",
     clause="9.8.2.3",
-    title="Effective moment of inertia, bottom in tension",
+    title="Effective moment of inertia, positive bending",
     basis=DEFLECTION_QUOTED,
 )
 EFFECTIVE_TOP = _formula(
     "I_e = min(I_cr + (I_g - I_cr)*(M_crdn/M_a)**3, I_g)",
     clause="9.8.2.3",
-    title="Effective moment of inertia, top in tension",
+    title="Effective moment of inertia, negative bending",
     basis=DEFLECTION_QUOTED,
 )
 BOTH_ENDS = _formula(

@@ -70,13 +70,13 @@ CENTROID_TOP = _formula(
 CRACKING_BOTTOM = _formula(
     "M_cr = f_r*I_g/y_b",
     clause="8.6.4",
-    title="Cracking moment, bottom in tension",
+    title="Cracking moment, positive bending",
     basis=MECHANICS,
 )
 CRACKING_TOP = _formula(
     "M_crn = f_r*I_g/y_t",
     clause="8.6.4",
-    title="Cracking moment, top in tension",
+    title="Cracking moment, negative bending",
     basis=MECHANICS,
 )
 
