@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from lineproof.beams.continuous.typed_beam import GRAVITY_TYPES
 from lineproof.beams.inputs import Range, read_in_range
 from lineproof.errors import FaultList, UserError
-from lineproof.quantity import Typed, echo
+from lineproof.quantity import QuantityInput, Typed, echo
 
 TORQUE = Range("kN.m", 0, 1000, zero=True)
 KINDS_OF_TORSION = ("compatibility", "equilibrium")
@@ -26,8 +26,15 @@ def read_torques(name: str, given: object) -> dict[str, Typed]:
             faults.add(f"{name}: load type {echo(kind)}; write one of {', '.join(GRAVITY_TYPES)}")
             continue
         try:
-            made[kind] = read_in_range(f"{name}, {kind}", text, TORQUE)
+            made[kind] = read_in_range(f"{name}, {kind}", _on_one_metre(text), TORQUE)
         except UserError as error:
             faults.take(error)
     faults.raise_if_any()
     return made
+
+
+def _on_one_metre(text: QuantityInput) -> QuantityInput:
+    """Return a torque per metre as the torque on one metre: '5.5 kN.m/m' is '5.5 kN.m' there."""
+    if isinstance(text, str) and text.rstrip().endswith("N.m/m"):
+        return text.rstrip().removesuffix("/m")
+    return text
