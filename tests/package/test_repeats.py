@@ -149,7 +149,7 @@ def test_pdf_tells_what_a_repeated_line_is() -> None:
     pages = pypdf.PdfReader(io.BytesIO(to_pdf(package))).pages
     text = " ".join(" ".join(page.extract_text() for page in pages).split())
 
-    assert "repeats the line of that number" in text
+    assert "repeats the line or note of that number" in text
     for label in ("as 2.1", "as 2.2", "as 2.3"):
         assert label in text
     assert len(re.findall("holds, ratio 0.68", text)) == 2
