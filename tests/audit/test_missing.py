@@ -73,8 +73,9 @@ def test_the_simple_beam_says_itself_what_it_does_not_cover() -> None:
          ("Development of the bottom bars where the moment is zero is checked at 5 places, not for "
           "span 2 at its left support.")),
         ("anchorage-lap-2/lap-length",
-         ("Length of the lap is checked for lap of top bars 20M only, not for lap of bottom bars "
-          "20M.")),
+         ("Length of the lap is checked for lap of top bars 20M, span 1, lap of top bars 20M, "
+          "span 2 and lap of top bars 20M, span 3 only, not for lap of bottom bars 20M, supports "
+          "2, 3.")),
         ("cover/cover-fire", "Cover of the principal bars for fire is not checked."),
     ],
 )  # fmt: skip

@@ -27,8 +27,8 @@ def test_top_steel_for_the_restraint_that_exists(ends: str, moment: float) -> No
     }
     assert top == {
         f"top-steel/{key}"
-        for key in ("bars-fit", "cover-bars", "steel-for-moment", "yield", "strength",
-                    "minimum-steel", "second-path", "top-bars-spread")
+        for key in ("bars-fit", "bars-fit-overhang", "cover-bars", "steel-for-moment", "yield",
+                    "strength", "minimum-steel", "second-path", "top-bars-spread")
     }  # fmt: skip
 
 

@@ -149,11 +149,11 @@ def test_factored_combinations_are_those_of_the_table() -> None:
 def test_live_load_of_storage_accompanies_with_a_half_more() -> None:
     """NBC 4.1.3.2: companion L plus 0.5 for storage: 1.5 in case 3, 1.0 in cases 4 and 5."""
     made = names(factored_combinations(["D", "L_st", "S", "W", "E"]))
-    assert "1.25D + 1.5L_st + 1.0S" in made
-    assert "0.9D + 1.5S + 1.5L_st" in made
-    assert "1.25D + 1.4W + 1.0L_st" in made
-    assert "1.0D + 1.0E + 1.0L_st + 0.25S" in made
-    assert "1.25D + 1.5L_st + 0.4W" in made
+    assert "1.25D + 1.5L (storage) + 1.0S" in made
+    assert "0.9D + 1.5S + 1.5L (storage)" in made
+    assert "1.25D + 1.4W + 1.0L (storage)" in made
+    assert "1.0D + 1.0E + 1.0L (storage) + 0.25S" in made
+    assert "1.25D + 1.5L (storage) + 0.4W" in made
 
 
 def test_service_combinations() -> None:
@@ -161,7 +161,7 @@ def test_service_combinations() -> None:
     assert names(service_combinations(["D", "L", "S"])) == [
         "1.0D", "1.0D + 1.0L", "1.0D + 1.0L + 0.35S", "1.0D + 1.0S", "1.0D + 1.0S + 0.35L",
     ]  # fmt: skip
-    assert "1.0D + 1.0S + 0.5L_st" in names(service_combinations(["D", "L_st", "S"]))
+    assert "1.0D + 1.0S + 0.5L (storage)" in names(service_combinations(["D", "L_st", "S"]))
     assert "1.0D + 1.0W + 0.35L" in names(service_combinations(["D", "L", "W"]))
 
 

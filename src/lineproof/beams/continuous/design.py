@@ -16,6 +16,7 @@ from typing import Any
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars, bars_text
 from lineproof.beams.continuous import faces, flexure_choice
 from lineproof.beams.continuous.anchorage import fits_hook
+from lineproof.beams.continuous.anchored_ends import least_anchored
 from lineproof.beams.continuous.bar_choice import Bars, Chosen
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design_torsion import (
@@ -165,8 +166,9 @@ def design_of(model: Model, pair: CodePair) -> Design:
         asked = further
         made = _designed(model, pair, basis, (given, *sections), asked, made)
     raise UserError(
-        "bars: none were found that carry moment, shear and torsion everywhere; write a "
-        "wider or deeper beam, or the bars themselves as bar_runs"
+        "bars: none were found that carry moment, shear and torsion everywhere and are anchored in "
+        "the end supports; write a wider or deeper beam, wider end supports, or the bars "
+        "themselves as bar_runs"
     )
 
 
@@ -188,7 +190,7 @@ def _designed(
     )  # fmt: skip
     bottom = flexure_choice.choose_bottom(
         model, pair, bottom_given, asked.bottom,
-        lambda k, size: k not in asked.anchored or _anchored_span(bare, k, size),
+        lambda k, size: least_anchored(bare, k, size, asked.anchored.get(k, 0.0)),
     )  # fmt: skip
     top = flexure_choice.choose_top(
         model,
@@ -271,11 +273,6 @@ def _text(bars: Bars) -> str:
 def _anchored(bare: Designed, support: int, size: str, *, spread: bool = False) -> bool:
     """Tell whether bars of a size can be hooked into an end support, if they end there."""
     return not bare.exterior(support) or fits_hook(bare, support, size, spread=spread)
-
-
-def _anchored_span(bare: Designed, span: int, size: str) -> bool:
-    """Tell whether bottom bars of a span can be hooked into the end supports that they reach."""
-    return all(_anchored(bare, support, size) for support in (span, span + 1))
 
 
 def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choice:

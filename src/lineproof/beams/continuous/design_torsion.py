@@ -15,10 +15,10 @@ import numpy as np
 
 from lineproof.beams.choice import SIZES
 from lineproof.beams.continuous.anchorage import fits_hook
+from lineproof.beams.continuous.detailing_bottom import SIDES, face_tension
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import Standing, yield_force
-from lineproof.beams.continuous.resistance_demand import end_tension
 from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.errors import UserError
 from lineproof.standards.a23_3 import torsion
@@ -28,6 +28,8 @@ HOLDERS = "15M"
 """Size of the two bars that hold the stirrups where no other top bars do (common practice)."""
 RESERVE = 0.997
 """Part of the bars that torsion may use: the layout of bars keeps two thousandths itself."""
+MORE_ANCHORED = 1.1
+"""By how much more is asked where bars chosen for an area are not anchored in that area."""
 STEPS = 4
 """Steps in which bars are counted over their development length for shear (shear_stretches)."""
 
@@ -37,14 +39,14 @@ class Asked:
     """What the sections must have beyond what their moments ask for.
 
     Least areas [mm2] of the bottom bars by span and of the top bars within the web by support, the
-    size of the bars that hold the stirrups, and the spans whose bottom bars must be of a size that
-    is anchored in the end supports.
+    size of the bars that hold the stirrups, and the area of bottom bars that must be anchored in
+    the end supports, by span [mm2].
     """
 
     bottom: Mapping[int, float] = field(default_factory=dict)
     top: Mapping[int, float] = field(default_factory=dict)
     holders: str = HOLDERS
-    anchored: AbstractSet[int] = frozenset()
+    anchored: Mapping[int, float] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)
@@ -163,26 +165,27 @@ def more(
         made = _with(made, asked, lack, designed.bars, free)
     for span, area in end_lacks(designed, standing):
         if span in free.spans:
-            least = max(made.bottom.get(span, 0.0), area)
-            made = replace(
-                made, bottom={**made.bottom, span: least}, anchored=made.anchored | {span}
-            )
+            before = asked.anchored.get(span, 0.0)
+            least = area if area > before else before * MORE_ANCHORED
+            least = max(least, made.anchored.get(span, 0.0))
+            made = replace(made, anchored={**made.anchored, span: least})
     return None if made == asked else made
 
 
 def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tuple[int, float]]:
-    """Give the end spans whose bottom bars lack anchorage in the end support (11.3.9.5).
+    """Give the end spans whose bottom bars lack anchorage at the face of the end support.
 
+    By 11.3.9.5, and by the tension of moment and shear there.
     With each the area that must be anchored there [mm2].
     """
     last = len(designed.outline.supports)
-    for support, span in ((1, 1), (last, last - 1)):
+    for near, support, span in zip(SIDES, (1, last), (1, last - 1), strict=True):
         if not designed.exterior(support):
             continue
         face = designed.outline.faces(span)[0 if support == 1 else 1]
         there = [bars for bars in standing if bars.run.face == "bottom"]
         area = sum(bars.run.area * float(bars.developed(np.array([face]))[0]) for bars in there)
-        needed = end_tension(designed, support) / yield_force(designed)
+        needed = face_tension(designed, span, near) / yield_force(designed)
         hooked = {bars.run.size for bars in there if _hooked(bars.run, support)}
         if area < needed or not all(fits_hook(designed, support, size) for size in hooked):
             yield span, needed

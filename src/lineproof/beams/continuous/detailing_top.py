@@ -11,7 +11,13 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
-from lineproof.beams.continuous.anchorage import available, development_length, has_hooks, value
+from lineproof.beams.continuous.anchorage import (
+    available,
+    development_length,
+    fits_hook,
+    has_hooks,
+    value,
+)
 from lineproof.beams.continuous.cutoff import (
     MARGIN,
     STEP,
@@ -210,11 +216,14 @@ def _end(designed: Designed, support: int, side: End, run: BarRun, reach: float 
 
 
 def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
-    """Return the hook of top bars at an end support: none where they develop straight."""
+    """Return the hook of top bars at an end support: none where they develop straight.
+
+    Nor where none fits: the bars count there by the part of their length that is developed.
+    """
     l_d = development_length(designed, run)
     if l_d <= available(designed, support) or not has_hooks(designed):
         return ""
-    return "90"
+    return "90" if fits_hook(designed, support, run.size) else ""
 
 
 def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], number: int) -> Reach:

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable, Iterable, Mapping
+from dataclasses import replace
 
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars
 from lineproof.beams.choice import bars_for
@@ -65,8 +67,8 @@ def rules_of(model: Model) -> Rules:
     return Rules(model.inputs.shape, model.inputs.minimum_rule)
 
 
-Anchored = Callable[[int, str], bool]
-"""Tell whether bars of a size can be anchored: bottom bars of a span, top bars of a support."""
+Anchored = Callable[[int, str], float]
+"""Give the least area [mm2] of bottom bars of a size of which enough is anchored, by span."""
 
 
 def choose_bottom(
@@ -80,8 +82,8 @@ def choose_bottom(
 
     Of bars given along the beam: no item for a span whose largest moment none of them cross.
 
-    ``least`` is the area that shear and torsion ask for, by span; ``anchored`` tells whether bars
-    of a size can be anchored in the end supports.
+    ``least`` is the area that shear and torsion ask for, by span; ``anchored`` gives that of bars
+    of a size which the end supports ask for, infinite where no number of them can be anchored.
     """
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
@@ -99,9 +101,10 @@ def choose_bottom(
     search = bottom_trial(rules, stirrup)
 
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
-        if anchored is not None and not anchored(numbered[section.name], size):
+        least = 0.0 if anchored is None else anchored(numbered[section.name], size)
+        if math.isinf(least):
             return None, "anchorage in the support"
-        return search(section, size)
+        return search(replace(section, least=max(section.least, least)), size)
 
     found = choose(list(sections.values()), trial, "bottom_bars")
     return made | dict(zip(sections, found, strict=True))
