@@ -276,6 +276,11 @@ def test_end_supports_too_narrow_for_hooks() -> None:
     assert "write a wider support" in faults[0]
 
 
+def test_bars_that_do_not_fit_are_told_by_the_title_of_the_check() -> None:
+    faults = refused_at("flexure", h="400 mm", b_w="250 mm")
+    assert faults[0].startswith("top_bars: no bars pass every check at support 2: stopped by: Bars")
+
+
 def test_a_frame_analysis_that_is_not_there() -> None:
     matches(
         refused_at_start(forces_csv="nowhere.csv", b_w="38 m"),

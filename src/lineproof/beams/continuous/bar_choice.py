@@ -24,6 +24,7 @@ from lineproof.beams.continuous.section_checks import (
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import minimum
 from lineproof.standards.a23_3.bars import BARS, LEAST_CLEAR
+from lineproof.standards.catalogue import criteria
 
 FOR_SHEAR = "the bars that shear and torsion ask for (11.3.9, 11.3.10.6)"
 
@@ -114,13 +115,18 @@ def _each_its_own(
         if able:
             yield min(able, key=lambda c: order([c], [section]))
             continue
-        why = "; ".join(text for text, _ in stopped[section.name].most_common(3))
+        why = ", ".join(_said(key) for key, _ in stopped[section.name].most_common(3))
         support = "a wider support, " if "anchorage in the support" in why else ""
         faults.add(
-            f"{what}: no bars pass every check at {section.name}: stopped by {why}; write "
+            f"{what}: no bars pass every check at {section.name}: stopped by: {why}; write "
             f"{support}a deeper or wider beam, or stronger concrete"
         )
     faults.raise_if_any()
+
+
+def _said(key: str) -> str:
+    """Return the title of a check by its key, as it stands on the page; else what is given."""
+    return next((test.title for _, test in criteria() if test.key == key), key)
 
 
 def bottom_trial(rules: Rules, stirrup: str) -> Trial:
