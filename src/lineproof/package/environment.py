@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import base64
 import json
+import math
 import re
 import threading
 from dataclasses import dataclass, field
@@ -52,6 +53,10 @@ if TYPE_CHECKING:
 _NODES = (
     Digits, Fence, Fraction, Letter, Prime, Root, Row, Scripts, Sign, Thin, Unit, Word,
 )  # fmt: skip
+_PAGE_ROWS, _PAGE_LINES = 24, 40
+"""Rows and lines of text that surely have room on one page."""
+_LETTERS = 20
+"""Letters that stand in a line of a narrow column."""
 _SHORT_CELL = 160
 _TEXT_SIZES = ((6, "9"), (8, "8.5"), (10, "8"), (12, "7.5"), (10_000, "7"))
 _LONG_WORD = re.compile(r"\S{40}")
@@ -223,6 +228,7 @@ def _filters() -> dict[str, Any]:
         "length_class": _length_class,
         "fails": fails,
         "short_cells": _short_cells,
+        "on_one_page": _on_one_page,
         "heading": _heading,
         "text_size": _text_size,
         "table_heights": table_heights,
@@ -267,6 +273,12 @@ def _part_heights(parts: Sequence[PartSummary]) -> str:
 def _short_cells(table: PrintedTable) -> bool:
     """Tell whether no cell of a table can grow longer than a page, however narrow it is set."""
     return all(len(cell) <= _SHORT_CELL for line in table.rows for cell in line)
+
+
+def _on_one_page(table: PrintedTable) -> bool:
+    """Tell whether a table surely has room on one page, by the letters of its longest cells."""
+    lines = sum(math.ceil(max(map(len, row), default=1) / _LETTERS) or 1 for row in table.rows)
+    return len(table.rows) <= _PAGE_ROWS and lines <= _PAGE_LINES
 
 
 def _length_class(title: str) -> str:

@@ -218,12 +218,14 @@ def _end(designed: Designed, support: int, side: End, run: BarRun, reach: float 
 def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
     """Return the hook of top bars at an end support: none where they develop straight.
 
-    Nor where none fits: the bars count there by the part of their length that is developed.
+    Nor where none fits and no moment stands: the end is free to rotate, no restraint is assumed.
     """
     l_d = development_length(designed, run)
     if l_d <= available(designed, support) or not has_hooks(designed):
         return ""
-    return "90" if fits_hook(designed, support, run.size) else ""
+    simple = designed.outline.supports[support - 1].kind == "simple"
+    free = simple and support not in designed.restrained
+    return "" if free and not fits_hook(designed, support, run.size) else "90"
 
 
 def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], number: int) -> Reach:
