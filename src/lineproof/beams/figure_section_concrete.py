@@ -8,11 +8,17 @@ from lineproof.beams.section_shape import SectionShape
 from lineproof.drawing import LIGHT, Line, Point, Polyline, Shape
 
 SCALES = (5.0, 7.5, 10.0, 12.5, 15.0, 20.0, 25.0, 30.0, 40.0, 50.0, 75.0, 100.0)
+"""Usual scales, 1 to so many."""
 TALLEST_SECTION = 51.0
+"""Height of a section on paper at most [mm]."""
 SMALLEST_WITH_WHOLE_FLANGE = 15.0
+"""Scale up to which a flange is drawn whole."""
 LOWEST_WITH_WHOLE_FLANGE = 36.0
+"""Height on paper from which a section is high enough for that [mm]."""
 BREAK_PAST = 2.0
+"""How far a break line goes beyond the flange on paper [mm]."""
 SHORTEST_STUB = 26.0
+"""Part of a cut flange that is drawn beside the web at least, on paper [mm]."""
 
 
 @dataclass(frozen=True, slots=True)
