@@ -133,8 +133,9 @@ def test_no_test_module_is_imported_by_another() -> None:
     found = []
     for path in Path(__file__).parent.rglob("*.py"):
         for node in ast.walk(ast.parse(path.read_text(encoding="utf-8"))):
-            if isinstance(node, ast.ImportFrom):
-                names = [*(node.module or "").split("."), *(alias.name for alias in node.names)]
+            if isinstance(node, ast.Import | ast.ImportFrom):
+                module = node.module or "" if isinstance(node, ast.ImportFrom) else ""
+                names = ".".join([module, *(alias.name for alias in node.names)]).split(".")
                 files = (f"{name}.py" for name in names if name.startswith("test_"))
                 found += [(path.name, name) for name in files if name in TEST_FILES]
     assert found == []

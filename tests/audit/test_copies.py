@@ -40,7 +40,7 @@ def test_one_slip_in_two_rows_is_no_copy() -> None:
 
 
 def test_a_row_without_fault_may_have_been_copied() -> None:
-    """With 19.5 + 9.75 in span 2, d = 620 - 30 - 11.3 - 29.25 = 549.45; span 1 claimed as that."""
+    """With 19.5 + 9.75 in span 3, d = 620 - 30 - 11.3 - 29.25 = 549.45; span 2 claimed as that."""
     sheet = _sheet()
     with sheet.part("sag-3", "Flexure, span 3"):
         sheet.line("d = h - c_c - d_bs - 1.5*d_b", unit="mm")

@@ -11,7 +11,9 @@ import pypdf
 import pytest
 
 from lineproof.package import Package, build_package, to_html, to_pdf
+from lineproof.package.environment import _on_one_page
 from lineproof.typeset import plain
+from lineproof.typeset.rows import PrintedTable
 
 from .whole_beam import whole_beam
 
@@ -273,3 +275,11 @@ def test_a_row_that_says_much_is_still_printed_whole() -> None:
         sheet.table("t", ["a", "b"], [["1", " ".join(words)]], title="T", front=9)
     text = " ".join(pages(to_pdf(build_package([sheet.close().data]))))
     assert all(re.search(rf"\b{word}\b", text) for word in words)
+
+
+@pytest.mark.parametrize(("letters", "whole"), [(10, True), (100, False)])
+def test_only_a_table_that_has_room_on_a_page_stands_whole(letters: int, whole: bool) -> None:  # noqa: FBT001
+    """24 rows of one line have; with cells of five lines, 120 of them, they have not."""
+    table = PrintedTable((), (("1", "x" * letters),) * 24, (False, False))
+
+    assert _on_one_page(table) is whole

@@ -34,8 +34,8 @@ from lineproof.record.utilisation import printed_ratio, ratio, sides_for_ratio, 
 
 __all__ = ["Printer", "exact_decimal", "in_unit", "ratio", "utilisation"]
 
-MOST_PASSES = 8
-"""Passes of printing: the later ones show each value as long as other lines need it."""
+MOST_PASSES = 24
+"""Passes of printing at most; the demo beam settles in eight."""
 _RESIDUAL = 0.01
 """Share of the other side below which a side is but the residual of nearly equal numbers."""
 _LEAST_FOUND = 4

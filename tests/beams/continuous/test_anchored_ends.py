@@ -10,6 +10,8 @@ import pytest
 
 from lineproof.beams.continuous.anchored_ends import least_anchored
 from lineproof.beams.continuous.detailing_data import SectionBars
+from lineproof.beams.continuous.detailing_top import end_hook
+from lineproof.beams.continuous.layout import BarRun
 from lineproof.record import recompute
 
 from . import flow
@@ -40,15 +42,27 @@ def test_area_of_straight_bars_by_hand() -> None:
 
     A hook of a 15M bar needs 0.8 x 100 x 16/sqrt(32) = 226 mm with its ties: it does not fit.
     Straight, by the table of 12.2.3 (factor 0.8 of thin bars, the others 1), l_d =
-    0.45 x 0.8 x 400/sqrt(32) x 16 = 407 mm. The part 200/407 = 0.491 counts: 2-15M hold 196 mm2,
-    3-15M 295 mm2, so that 250 mm2 ask for three bars, 600 mm2.
+    0.45 x 0.8 x 400/sqrt(32) x 16 = 407 mm. The part 200/407 = 0.491 counts: 2-15M hold 196.4 mm2,
+    3-15M 294.6 mm2: 197 mm2 ask for three bars, 600 mm2, and 295 mm2 for four.
     """
     design = flow.analysed(spans=["5.5 m"], supports=["wall 250 mm"] * 2).design
     bare = replace(design.designed, bars=SectionBars((), (), "15M"))
 
-    areas = [least_anchored(bare, 1, "15M", needed) for needed in (100.0, 250.0)]
+    areas = [least_anchored(bare, 1, "15M", needed) for needed in (196.0, 197.0, 294.0, 295.0)]
 
-    assert areas == [400.0, 600.0]
+    assert areas == [400.0, 600.0, 600.0, 800.0]
+
+
+@pytest.mark.parametrize(("restrained", "hook"), [(frozenset({2}), "90"), (frozenset(), "")])
+def test_only_an_end_that_is_free_to_rotate_goes_without_a_hook(
+    restrained: frozenset[int], hook: str
+) -> None:
+    """On 250 mm a hook of 226 mm does not fit; where a restraint is assumed it stands still."""
+    design = flow.analysed(spans=["5.5 m"], supports=["wall 250 mm"] * 2).design
+    end = replace(design.designed, restrained=restrained)
+    run = BarRun("top", 1, 2, "15M", 0.0, 5450.0)
+
+    assert end_hook(end, 2, run) == hook
 
 
 def test_more_is_never_less() -> None:

@@ -216,7 +216,8 @@ def test_overhangs_take_as_many_bars_as_cracks_ask_for() -> None:
 
     15M: d_c = 60 + 11.3 + 8 = 79.3 mm, width 600 + 2*min(b_o, 14000/20) = 2000 mm at most; z =
     240*(79.3*2*79.3*2000/n)**(1/3) <= 25 000 asks for n >= 22.3, and the web takes no more than
-    (600 - 2*(71.3 + 22.5))/(30 + 16) + 1 = 9 of them.
+    (600 - 2*(71.3 + 22.5))/(30 + 16) + 1 = 9 of them. Minimum steel, 0.2*sqrt(40)/400*1500*1100 =
+    5218 mm2, asks for 27.
     """
     beam = analysed(
         spans=["14 m", "12 m"], supports=["column 500 mm"] * 3, h="1100 mm", b_w="600 mm",
@@ -226,7 +227,7 @@ def test_overhangs_take_as_many_bars_as_cracks_ask_for() -> None:
     chosen = flexure_choice.choose_top(beam.model, beam.pair, {}, lambda _, __, ___: True)
     top = chosen[2].bars
     assert isinstance(top, TopBars)
-    width = 600 + 2 * 600  # of 12 m: 12 000/20 = 600 mm of each overhang
+    width = 600 + 2 * 700  # of 14 m: 14 000/20 = 700 mm of each overhang
     d_c = (
         60
         + 11.3

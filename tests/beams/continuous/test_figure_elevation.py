@@ -328,7 +328,7 @@ def test_names_of_ties_stand_beside_the_axes() -> None:
     ]  # fmt: skip
     outward = [max(-name.at[0], name.at[0] - end) for name in names]
     assert len(outward) == 2
-    assert min(outward) * figure.scale > 1.15 + 0.35 - 1e-6  # half the line of the axis
+    assert min(outward) * figure.scale > 1.15 + 0.35 - 1e-6  # half the line of the axis, round-off
 
 
 def test_words_say_what_is_drawn() -> None:
