@@ -277,7 +277,7 @@ def _short_cells(table: PrintedTable) -> bool:
 
 def _on_one_page(table: PrintedTable) -> bool:
     """Tell whether a table surely has room on one page, by the letters of its longest cells."""
-    lines = sum(math.ceil(max(map(len, row), default=1) / _LETTERS) or 1 for row in table.rows)
+    lines = sum(math.ceil(max(map(len, row), default=0) / _LETTERS) or 1 for row in table.rows)
     return len(table.rows) <= _PAGE_ROWS and lines <= _PAGE_LINES
 
 

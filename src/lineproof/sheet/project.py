@@ -101,7 +101,7 @@ def _check_facts(path: Path, facts: dict[str, Any]) -> None:
         given = facts.get(rows, [])
         if not (isinstance(given, list) and all(isinstance(row, dict) for row in given)):
             faults.append(f"{path}: {rows!r} must be a list of tables; write [[{rows}]]")
-    faults += [*_unknown(path, facts), *_unsigned(path, facts), *_unimportant(path, facts)]
+    faults += [*_unknown(path, facts), *_unsigned(path, facts), *_unknown_importance(path, facts)]
     if not isinstance(facts.get("codes"), dict) or "pair" not in facts["codes"]:
         faults.append(f"{path}: no code pair; write under [codes]: pair = 'NBC 2015 + A23.3-14'")
     elif not isinstance(facts["codes"]["pair"], str):
@@ -123,7 +123,7 @@ def _unsigned(path: Path, facts: dict[str, Any]) -> list[str]:
     ]
 
 
-def _unimportant(path: Path, facts: dict[str, Any]) -> list[str]:
+def _unknown_importance(path: Path, facts: dict[str, Any]) -> list[str]:
     """Return a fault for an importance category that the code has not."""
     table = facts.get("building", {})
     given = table.get("importance", "") if isinstance(table, dict) else ""

@@ -1,4 +1,4 @@
-"""How many bottom bars of a size an end support holds, by hooks or straight (11.3.9.5)."""
+"""How many bottom bars of a size an end support holds, by hooks or straight (11.3.9)."""
 
 from __future__ import annotations
 
@@ -17,9 +17,7 @@ def least_anchored(bare: Designed, span: int, size: str, needed: float) -> float
     mm2. Where no hook of the size fits, straight bars count by the part of their development length
     that the support holds; infinite where no number of bars does.
     """
-    last = len(bare.outline.supports)
-    ends = [support for support in (span, span + 1) if support in (1, last)]
-    held = [support for support in ends if bare.exterior(support)]
+    held = [support for support in (span, span + 1) if bare.exterior(support)]
     return max((_least_at(bare, support, size, needed) for support in held), default=0.0)
 
 

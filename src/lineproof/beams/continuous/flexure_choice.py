@@ -67,7 +67,7 @@ def rules_of(model: Model) -> Rules:
     return Rules(model.inputs.shape, model.inputs.minimum_rule)
 
 
-Anchored = Callable[[int, str], float]
+LeastAnchored = Callable[[int, str], float]
 """Give the least area [mm2] of bottom bars of a size of which enough is anchored, by span."""
 
 
@@ -76,14 +76,14 @@ def choose_bottom(
     pair: CodePair,
     given: Mapping[int, BarLayers],
     least: Mapping[int, float] | None = None,
-    anchored: Anchored | None = None,
+    least_anchored: LeastAnchored | None = None,
 ) -> dict[int, Chosen]:
     """Return the bottom bars of every span, ``given`` or chosen; raises :class:`UserError`.
 
     Of bars given along the beam: no item for a span whose largest moment none of them cross.
 
-    ``least`` is the area that shear and torsion ask for, by span; ``anchored`` gives that of bars
-    of a size which the end supports ask for, infinite where no number of them can be anchored.
+    ``least`` is the area that shear and torsion ask for, by span; ``least_anchored`` gives that of
+    bars of a size which the end supports ask for, infinite where no number of them can be anchored.
     """
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
@@ -101,10 +101,10 @@ def choose_bottom(
     search = bottom_trial(rules, stirrup)
 
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
-        least = 0.0 if anchored is None else anchored(numbered[section.name], size)
-        if math.isinf(least):
+        at_ends = least_anchored(numbered[section.name], size) if least_anchored else 0.0
+        if math.isinf(at_ends):
             return None, "anchorage in the support"
-        return search(replace(section, least=max(section.least, least)), size)
+        return search(replace(section, least=max(section.least, at_ends)), size)
 
     found = choose(list(sections.values()), trial, "bottom_bars")
     return made | dict(zip(sections, found, strict=True))

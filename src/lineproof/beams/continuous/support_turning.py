@@ -23,7 +23,7 @@ _SIGN = (
     "A support that holds the ends of the spans against rotation takes the moment to its left less "
     "that to its right: positive clockwise, as the elevation is drawn."
 )
-_OF_INPUTS = (
+_TO_SUPPORTS = (
     "The torque of each half of a span goes to the nearer support, that of an overhang to its own. "
     "Live load stands on the spans on both sides. Nothing is redistributed here."
 )
@@ -99,7 +99,7 @@ def record_support_torques(model: Model, torques: Mapping[str, Entry]) -> None:
     sheet = model.sheet
     sheet.notation = sheet.notation | notation(_symbols_of_torques(supports, kinds))
     with sheet.part(TORQUES, "Torques of the supports"):
-        sheet.note("torques", _OF_INPUTS, title="Torque to the supports", clause="statics")
+        sheet.note("torques", _TO_SUPPORTS, title="Torque to the supports", clause="statics")
         for kind in kinds:
             for j in supports:
                 lengths = " + ".join(_length(model, span) for span, _ in ends_at(model, j))

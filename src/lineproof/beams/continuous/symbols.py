@@ -106,6 +106,7 @@ def stated_check(text: str, unit: str, *, title: str, yes: str, no: str, key: st
     return made
 
 
+@lru_cache(maxsize=8192)
 def required(
     text: str, unit: str, *, title: str, yes: str, key: str, clause: str = "statics"
 ) -> Criterion:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import Any, Protocol
 
 from lineproof.beams.continuous.shear_numbers import ShearBasis
+from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.beams.continuous.torsion import AREAS, SpanTorsion
 from lineproof.beams.inputs import Shape
 from lineproof.beams.steps import Steps
@@ -32,7 +33,6 @@ _IMPORTED = (
     "The torsion of every case is that of the frame analysis, on the straight line between two of "
     "its stations."
 )
-_KINDS = {"D": "dead load", "L": "live load", "L_st": "live load of storage", "S": "snow"}
 
 
 def record_span_torsion(
@@ -48,7 +48,7 @@ def record_span_torsion(
     for kind, torque in torsion.torques.items():
         name = torque_symbol(kind)
         made[name] = sheet.given(
-            name, f"{torque / 1000:.12g} kN.m/m", f"torque per length by {_KINDS.get(kind, kind)}",
+            name, f"{torque / 1000:.12g} kN.m/m", f"torque per length by {KINDS.get(kind, kind)}",
             source="torques of the inputs",
         )  # fmt: skip
     held = _HELD_ONCE if cantilever else _HELD
@@ -81,7 +81,7 @@ def section_of_torsion(sheet: Sheet, span: int, torsion: SpanTorsion) -> dict[st
 
 def torque_symbol(kind: str) -> str:
     """Return the symbol of the torque per length by a load type."""
-    return f"t_{kind.replace('_', '')}"
+    return f"t_{code(kind)}"
 
 
 class Turned(Protocol):
