@@ -116,6 +116,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "development.SPACED": ({"d_b": 25.2, "s_c": 48.9}, {"d_b": 25.2, "s_c": 35}),
     "development.SPACED_SLAB": ({"d_b": 16, "s_c": 32}, {"d_b": 16, "s_c": 31}),
     "development.DEVELOPED": ({"l_d": 672, "l_av": 700}, {"l_d": 672, "l_av": 671}),
+    "development.IN_PART": ({"l_d": 672, "l_av": 671}, {"l_d": 672, "l_av": 672}),
     "development.DEVELOPED_COMPRESSION": (
         {"l_dc": 444, "l_av": 444},
         {"l_dc": 444, "l_av": 400},
@@ -130,6 +131,9 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
         {"a_max": 20, "s_tie": 55, "d_bs": 11.3},
         {"a_max": 20, "s_tie": 41, "d_bs": 11.3},
     ),
+    # 8 diameters of a bar 25M are 201.6 mm, of a bar 15M 128 mm, less than 150
+    "hooks.LEAST_FITS": ({"l_av": 202, "d_b": 25.2}, {"l_av": 149, "d_b": 16}),
+    "hooks.IN_PART": ({"l_dh": 426, "l_av": 340}, {"l_dh": 298, "l_av": 298}),
     "hooks.FITS": ({"l_dh": 298, "l_av": 340}, {"l_dh": 426, "l_av": 340}),
     "laps.LAPPABLE": ({"d_b": 35.7}, {"d_b": 43.7}),
     "laps.EXCESS_FOR_A": ({"A_sr": 1000, "A_s": 2000}, {"A_sr": 1001, "A_s": 2000}),

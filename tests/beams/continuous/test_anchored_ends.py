@@ -1,26 +1,29 @@
-"""Bottom bars at narrow end supports: more straight bars where no hook of their size fits."""
+"""Bars at narrow end supports: they count with the part that hook or straight end develops."""
 
 from __future__ import annotations
 
+import math
+import re
 from dataclasses import replace
 from itertools import pairwise
 from typing import Any
 
 import pytest
 
-from lineproof.beams.continuous.anchored_ends import least_anchored
-from lineproof.beams.continuous.detailing_data import SectionBars
-from lineproof.beams.continuous.detailing_top import end_hook
+from lineproof.beams.bars import BarLayer, TopBars
+from lineproof.beams.continuous.anchored_ends import end_hook, least_anchored, top_part
+from lineproof.beams.continuous.detailing_data import Designed, SectionBars
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.record import recompute
 
 from . import flow
 
+EDITION_2024 = {"codes": {"pair": "NBC 2025 + A23.3:24"}}
 WALLS: list[dict[str, Any]] = [
     {"spans": ["5.5 m"], "supports": ["wall 250 mm"] * 2},
     {"spans": ["3.6 m"] * 3, "supports": ["wall 200 mm"] * 4, "h": "400 mm", "b_w": "300 mm"},
     {"spans": ["6 m"], "supports": ["wall 250 mm"] * 2,
-     "project": {"codes": {"pair": "NBC 2025 + A23.3:24"}}},
+     "project": EDITION_2024},
     # Its top bars run through to the outer wall, where no hook fits and no moment stands.
     {"spans": ["3.4 m", "4.9 m"], "supports": ["wall 250 mm"] * 3, "h": "380 mm", "b_w": "350 mm",
      "spacing": "4.7 m", "superimposed": "1.0 kPa"},
@@ -37,27 +40,130 @@ def test_beams_on_masonry_walls_are_designed(inputs: dict[str, Any]) -> None:
     assert recompute(record) == []
 
 
-def test_area_of_straight_bars_by_hand() -> None:
+def bare_of(**inputs: Any) -> Designed:
+    """Return a beam as it is while its bars are chosen: none stand yet."""
+    design = flow.analysed(**inputs).design
+    return replace(design.designed, bars=SectionBars((), (), "15M"))
+
+
+def test_area_of_hooked_bottom_bars_by_hand() -> None:
     """A wall 250 mm wide, bars that end 50 mm before its outer face: l_av = 200 mm.
 
-    A hook of a 15M bar needs 0.8 x 100 x 16/sqrt(32) = 226 mm with its ties: it does not fit.
-    Straight, by the table of 12.2.3 (factor 0.8 of thin bars, the others 1), l_d =
+    A hook of a 15M bar needs 0.8 x 100 x 16/sqrt(32) = 226.3 mm with its ties, 8 x 16 = 128 and
+    150 at least: the part 200/226.3 = 0.884 counts, 2-15M hold 353.6 mm2, 3-15M 530.3 mm2.
+    """
+    bare = bare_of(spans=["5.5 m"], supports=["wall 250 mm"] * 2)
+
+    areas = [least_anchored(bare, 1, "15M", needed) for needed in (353.0, 354.0, 530.0, 531.0)]
+
+    assert areas == [400.0, 600.0, 600.0, 800.0]
+
+
+def test_area_of_straight_bottom_bars_by_hand() -> None:
+    """The same wall, and an edition whose hooks cannot be calculated: the bars are straight.
+
+    By the table of 12.2.3 (factor 0.8 of thin bars, the others 1) l_d =
     0.45 x 0.8 x 400/sqrt(32) x 16 = 407 mm. The part 200/407 = 0.491 counts: 2-15M hold 196.4 mm2,
     3-15M 294.6 mm2: 197 mm2 ask for three bars, 600 mm2, and 295 mm2 for four.
     """
-    design = flow.analysed(spans=["5.5 m"], supports=["wall 250 mm"] * 2).design
-    bare = replace(design.designed, bars=SectionBars((), (), "15M"))
+    bare = bare_of(spans=["5.5 m"], supports=["wall 250 mm"] * 2, project=EDITION_2024)
 
     areas = [least_anchored(bare, 1, "15M", needed) for needed in (196.0, 197.0, 294.0, 295.0)]
 
     assert areas == [400.0, 600.0, 600.0, 800.0]
 
 
+@pytest.mark.parametrize(
+    ("support", "top", "part"),
+    [
+        (1, TopBars(BarLayer(2, "15M"), 0, 2), 1.0),
+        (1, TopBars(BarLayer(2, "15M"), 1, 2), 250 / 282.9),
+        (1, TopBars(BarLayer(2, "20M"), 0, 2), 250 / 275.8),
+        (1, TopBars(BarLayer(2, "25M"), 1, 2), 250 / 445.5),
+        (1, TopBars(BarLayer(2, "35M"), 0, 2), 250 / (1.3 * 0.45 * 400 / math.sqrt(32) * 35.7)),
+        (2, TopBars(BarLayer(2, "35M"), 0, 2), 1.0),
+    ],
+)
+def test_part_of_top_bars_that_counts_by_hand(support: int, top: TopBars, part: float) -> None:
+    """A girder of 300 mm at the end, bars that end 50 mm before its outer face: l_av = 250 mm.
+
+    Hooks, 100 d_b/sqrt(32): 15M 282.9, 20M 344.8, 25M 445.5 mm; of bars within the web alone with
+    ties, 0.8 of it: 15M 226.3, 20M 275.8. 8 diameters of 35M are 285.6 mm, more than that: these
+    end straight, as top bars over more than 300 mm of concrete (12.2.4), with minimum stirrups.
+    An inner girder is run through.
+    """
+    bare = bare_of(spans=["5 m", "5 m"], supports=["girder 300 mm"] * 3)
+
+    assert top_part(bare, support, top) == pytest.approx(part, rel=1e-3)
+
+
+NARROW: list[dict[str, Any]] = [
+    {"spans": ["6.3 m"], "supports": ["girder 300 mm"] * 2, "h": "520 mm", "b_w": "400 mm"},
+    {"spans": ["6.3 m"], "supports": ["girder 250 mm"] * 2, "h": "520 mm", "b_w": "300 mm",
+     "spacing": "4.2 m", "superimposed": "2.5 kPa"},
+    {"spans": ["6 m"], "supports": ["girder 300 mm"] * 2, "project": EDITION_2024},
+    # At the outer column the top is in tension by shear alone: the bars that hold the stirrups.
+    {"spans": ["8 m", "5.4 m"], "supports": ["column 250 mm"] * 3, "h": "570 mm", "b_w": "400 mm",
+     "spacing": "3.7 m", "superimposed": "1.4 kPa",
+     "columns": dict.fromkeys((1, 2, 3), ["250 mm x 250 mm x 3.2 m"] * 2)},
+    # Bars that run through a short span are no third of the steel of their support.
+    {"spans": ["4.3 m", "7.5 m", "4.3 m"], "supports": ["girder 300 mm"] * 4, "h": "540 mm",
+     "b_w": "400 mm", "spacing": "3 m", "superimposed": "2.5 kPa"},
+    # The top of the first span is in tension by the second one from near the end on.
+    {"spans": ["4.3 m", "6.2 m", "6.8 m"], "supports": ["girder 300 mm"] * 4, "h": "420 mm",
+     "b_w": "300 mm", "spacing": "4.3 m", "superimposed": "1.9 kPa"},
+]  # fmt: skip
+
+
+@pytest.mark.parametrize("inputs", NARROW, ids=lambda i: f"{i['supports'][0]}-{i['spans'][0]}")
+def test_beams_on_narrow_girders_and_columns_are_designed(inputs: dict[str, Any]) -> None:
+    """Ends of 250 and 300 mm: every check of strength and anchorage holds by the choice made."""
+    record = flow.run(flow.start(**inputs)).close()
+
+    assert [key for key in record.failed if not key.startswith("deflection")] == []
+    assert recompute(record) == []
+
+
+def test_a_section_counts_its_top_bars_as_far_as_their_hooks_are_developed() -> None:
+    """Girders of 300 mm: of the top bars 15M, A_sd = A_s x 250/282.9 carry the moment by hand.
+
+    f_c = 32 MPa, alpha_1 = 0.85 - 0.0015 x 32 = 0.802, b_w = 400, d = 520 - 41.3 - 8 = 470.7 mm.
+    """
+    record = flow.record_of(**NARROW[0])
+    section, part = (f"hog-1-right{tail}" for tail in ("", "-developed"))
+    whole = record.entries[f"{part}/A_s"]["value"]
+    A_sd = whole * 250 / 282.9
+    a = 0.85 * A_sd * 400 / (0.802 * 0.65 * 32 * 400)
+
+    assert whole == 200 * record.entries[f"{part}/n_b"]["value"]
+    assert record.entries[f"{part}/A_sd"]["value"] == pytest.approx(A_sd, rel=1e-6)
+    assert record.entries[f"{section}/M_r"]["value"] == pytest.approx(
+        0.85 * A_sd * 400 * (470.7 - a / 2) / 1e6, rel=1e-6
+    )
+    assert record.entries["anchorage-end-1-hook-15m/hook-in-part"]["holds"]
+    assert record.entries["anchorage-end-1-hook-15m/hook-least-length"]["holds"]
+    assert "anchorage-end-1-hook-15m/hook-fits" not in record.entries
+
+
+def test_shear_at_a_girder_counts_the_bars_in_the_overhangs() -> None:
+    """11.3.9 asks for area in tension: that of all top bars, not only of those within the web."""
+    beam = flow.analysed(**NARROW[1])
+    top = beam.design.top[1].bars
+    assert isinstance(top, TopBars)
+    told = next(text for text in beam.design.raised if text.startswith("support 1"))
+    alone = told.split("by the moments alone ")[1]
+
+    assert str(top) in told
+    beside = re.search(r"(\d)-15M in each", alone)
+    assert beside is not None
+    assert int(beside[1]) < top.overhang
+
+
 @pytest.mark.parametrize(("restrained", "hook"), [(frozenset({2}), "90"), (frozenset(), "")])
 def test_only_an_end_that_is_free_to_rotate_goes_without_a_hook(
     restrained: frozenset[int], hook: str
 ) -> None:
-    """On 250 mm a hook of 226 mm does not fit; where a restraint is assumed it stands still."""
+    """On 250 mm a hook of 226 mm is developed in part; a restraint assumed asks for it still."""
     design = flow.analysed(spans=["5.5 m"], supports=["wall 250 mm"] * 2).design
     end = replace(design.designed, restrained=restrained)
     run = BarRun("top", 1, 2, "15M", 0.0, 5450.0)
@@ -66,8 +172,7 @@ def test_only_an_end_that_is_free_to_rotate_goes_without_a_hook(
 
 
 def test_more_is_never_less() -> None:
-    design = flow.analysed(spans=["5.5 m"], supports=["wall 250 mm"] * 2).design
-    bare = replace(design.designed, bars=SectionBars((), (), "15M"))
+    bare = bare_of(spans=["5.5 m"], supports=["wall 250 mm"] * 2)
 
     areas = [least_anchored(bare, 1, "20M", 50.0 * n) for n in range(1, 12)]
 
@@ -76,7 +181,6 @@ def test_more_is_never_less() -> None:
 
 
 def test_no_number_of_bars_holds_everything() -> None:
-    design = flow.analysed(spans=["5.5 m"], supports=["wall 250 mm"] * 2).design
-    bare = replace(design.designed, bars=SectionBars((), (), "15M"))
+    bare = bare_of(spans=["5.5 m"], supports=["wall 250 mm"] * 2)
 
     assert least_anchored(bare, 1, "15M", 1e5) == float("inf")

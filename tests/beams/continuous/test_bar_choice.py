@@ -20,7 +20,9 @@ from lineproof.beams.bars import BarLayer, TopBars, in_line
 from lineproof.beams.continuous import flexure, flexure_choice
 from lineproof.beams.continuous.bar_choice import Chosen
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.faces import faces_of, hogging, sagging_spans
+from lineproof.beams.continuous.developed import Developed
+from lineproof.beams.continuous.faces import Face, faces_of, hogging, sagging_spans
+from lineproof.beams.continuous.layout import BarRun
 from lineproof.errors import UserError
 from lineproof.record.entry import CHECK
 from lineproof.sheet import Trial
@@ -47,6 +49,16 @@ def _holds(beam: beams.ContinuousBeam, record: Any, *keys: str) -> bool:
     return all(bool(check) for check in checks)
 
 
+class _Sections(Design):
+    """A design of which the sections alone are known: all bars are developed."""
+
+    def top_counted(self, face: Face) -> tuple[Developed, ...]:
+        top = self.top[face.support].bars
+        assert isinstance(top, TopBars)
+        runs = (BarRun("top", 1, g.number, g.size, 0.0, 1.0) for g in top.groups)
+        return tuple(Developed(run, 1.0, 1.0) for run in runs)
+
+
 def _sections(model: Any, beam: beams.ContinuousBeam, **bars: dict[int, Any]) -> Design:
     """Return a design of which the sections alone are known."""
     made = {
@@ -54,7 +66,7 @@ def _sections(model: Any, beam: beams.ContinuousBeam, **bars: dict[int, Any]) ->
         for face in ("bottom", "top")
     }
     unknown: Any = None
-    return Design(model, beam.pair, made["bottom"], made["top"], unknown, (), unknown)
+    return _Sections(model, beam.pair, made["bottom"], made["top"], unknown, (), unknown)
 
 
 def _bottom_layouts(size: str) -> Iterator[tuple[BarLayer, ...]]:
@@ -161,7 +173,7 @@ def _tops_are_best(beam: beams.ContinuousBeam) -> None:
         if all(size in made for made in best.values())
     ]
     try:
-        chosen = flexure_choice.choose_top(model, beam.pair, {}, lambda _, __, ___: True)
+        chosen = flexure_choice.choose_top(model, beam.pair, {}, lambda _, __: 1.0)
     except UserError:  # refused: then none may hold
         chosen = {}
     if not chosen:
@@ -224,7 +236,7 @@ def test_overhangs_take_as_many_bars_as_cracks_ask_for() -> None:
         h_f="150 mm", spacing="5 m", f_c="40 MPa", superimposed="1.5 kPa", use="office",
         exposure="C-1", cover="60 mm", fire_rating="1 h",
     )  # fmt: skip
-    chosen = flexure_choice.choose_top(beam.model, beam.pair, {}, lambda _, __, ___: True)
+    chosen = flexure_choice.choose_top(beam.model, beam.pair, {}, lambda _, __: 1.0)
     top = chosen[2].bars
     assert isinstance(top, TopBars)
     width = 600 + 2 * 700  # of 14 m: 14 000/20 = 700 mm of each overhang

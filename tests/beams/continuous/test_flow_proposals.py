@@ -61,7 +61,8 @@ def test_a_proposal_holds_its_own_checks(changes: Mapping[str, Any]) -> None:
 def test_more_bars_at_an_inner_girder_are_told_with_the_reason() -> None:
     """At the face of a girder the bars carry moment and shear together (11.3.9)."""
     told = record_of(supports=GIRDERS).entries["stirrups/more-bars"]["text"]
-    assert "More bars than the moments ask for: support 2" in told
+    assert told.startswith("More bars than the moments ask for: support")
+    assert "support 2: " in told
     assert "girder" in told
     assert "stirrups/more-bars" not in record_of().entries
 

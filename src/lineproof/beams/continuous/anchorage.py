@@ -282,13 +282,25 @@ def available(designed: Designed, support: int) -> float:
     )
 
 
-def fits_hook(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> bool:
-    """Tell whether a hook of a size has room in the depth and is developed at the inner face."""
+def hook_part(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> float:
+    """Return the part of the strength of bars that their hooks develop at the inner face.
+
+    0 where a hook has no room in the depth or not its least length, below which no steel in excess
+    lets it count (12.5.1), and in an edition whose hooks cannot be calculated.
+    """
     if not has_hooks(designed):
-        return True
+        return 0.0
     outline = designed.outline
     depth = outline.depths[0 if support == 1 else -1]
     d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
     if hook_leg(size, WIDEST_BENDS) > depth - 2 * (outline.cover + d_bs):
-        return False
-    return hook_at(designed, support, size, spread=spread).l_dh <= available(designed, support)
+        return 0.0
+    l_av = available(designed, support)
+    if not holds(hooks.LEAST_FITS, d_b=BARS.number(size, "d_b"), l_av=l_av):
+        return 0.0
+    return min(l_av / hook_at(designed, support, size, spread=spread).l_dh, 1.0)
+
+
+def fits_hook(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> bool:
+    """Tell whether a hook of a size has room in the depth and is developed at the inner face."""
+    return hook_part(designed, support, size, spread=spread) >= 1

@@ -1,34 +1,90 @@
-"""How many bottom bars of a size an end support holds, by hooks or straight (11.3.9)."""
+"""What bars of a size hold at the end supports, by hooks or straight, in full or in part.
+
+A bar counts by the length that its support gives over that which it needs: so the clauses on hooks
+and on straight bars let steel in excess of that required be shorter (12.2.5, 12.5.3).
+"""
 
 from __future__ import annotations
 
 import math
 
-from lineproof.beams.bars import spaced
+from lineproof.beams.bars import TopBars, spaced
 from lineproof.beams.choice import MOST_BARS
-from lineproof.beams.continuous.anchorage import Bar, available, develop, fits_hook, has_hooks
+from lineproof.beams.continuous.anchorage import (
+    Bar,
+    available,
+    develop,
+    development_length,
+    hook_part,
+    room_beside,
+)
 from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.developed import counted_part
+from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.standards.a23_3.bars import BARS
 
 
 def least_anchored(bare: Designed, span: int, size: str, needed: float) -> float:
     """Return the least area of bottom bars of a span of which ``needed`` is anchored at its ends.
 
-    mm2. Where no hook of the size fits, straight bars count by the part of their development length
-    that the support holds; infinite where no number of bars does.
+    mm2. Infinite where no number of bars does.
     """
     held = [support for support in (span, span + 1) if bare.exterior(support)]
     return max((_least_at(bare, support, size, needed) for support in held), default=0.0)
 
 
 def _least_at(bare: Designed, support: int, size: str, needed: float) -> float:
-    if has_hooks(bare) and fits_hook(bare, support, size):
-        return needed
-    l_av, A_b = available(bare, support), BARS.number(size, "A_b")
-    h = bare.outline.depths[0 if support == 1 else -1]
+    A_b, hooked = BARS.number(size, "A_b"), hook_part(bare, support, size)
     for number in range(2, MOST_BARS + 1):
-        straight = Bar("bottom", "web", 1, size, spaced(number), h)
-        part = min(l_av / develop(bare.basis, straight).l_d, 1.0)
-        if number * A_b * part >= needed:
+        bar = Bar("bottom", "web", 1, size, spaced(number), _depth(bare, support))
+        if number * A_b * max(hooked, _straight(bare, support, bar)) >= needed:
             return number * A_b
     return math.inf
+
+
+def top_part(bare: Designed, support: int, top: TopBars) -> float:
+    """Return the part of the area of top bars of one size that counts at the face of their support.
+
+    1 at a support that the bars run through.
+    """
+    if not bare.exterior(support):
+        return 1.0
+    size, h, beside = top.web.size, _depth(bare, support), top.sides * top.overhang
+    hooked = hook_part(bare, support, size, spread=beside > 0)
+    web = Bar("top", "web", 1, size, spaced(top.web.number), h)
+    area = top.web.area * _ended(bare, support, web, hooked)
+    if beside:
+        room = room_beside(bare, [1 if support == 1 else len(bare.outline.lengths)])
+        spread = Bar("top", "overhang", 1, size, beside, h, room)
+        area += (top.area - top.web.area) * _ended(bare, support, spread, hooked)
+    return area / top.area
+
+
+def _ended(bare: Designed, support: int, bar: Bar, hooked: float) -> float:
+    """Return the part of a top bar that counts: straight where it develops so, else by its hook."""
+    straight = _straight(bare, support, bar)
+    return straight if straight >= 1 or hooked == 0 else hooked
+
+
+def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
+    """Return the hook of top bars at an end support: none where they develop straight.
+
+    Nor where one would develop nothing; nor where it is not developed in full and no moment stands:
+    the end is free to rotate, no restraint is assumed.
+    """
+    part = hook_part(designed, support, run.size)
+    if part == 0 or development_length(designed, run) <= available(designed, support):
+        return ""
+    simple = designed.outline.supports[support - 1].kind == "simple"
+    free = simple and support not in designed.restrained
+    return "" if free and part < 1 else "90"
+
+
+def _straight(bare: Designed, support: int, bar: Bar) -> float:
+    """Return the part of its strength that a straight bar develops at the inner face."""
+    return counted_part(available(bare, support), develop(bare.basis, bar).l_d)
+
+
+def _depth(bare: Designed, support: int) -> float:
+    """Return the depth of the beam at an end support [mm]."""
+    return bare.outline.depths[0 if support == 1 else -1]

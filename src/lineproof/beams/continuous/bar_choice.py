@@ -26,6 +26,7 @@ from lineproof.standards.a23_3 import minimum
 from lineproof.standards.a23_3.bars import BARS, LEAST_CLEAR
 from lineproof.standards.catalogue import criteria
 
+ANCHORAGE = "anchorage in the support"
 FOR_SHEAR = "the bars that shear and torsion ask for (11.3.9, 11.3.10.6)"
 
 
@@ -34,13 +35,14 @@ class Section:
     """A section whose bars are chosen: its name, its numbers, the length its bars run over [mm].
 
     Several sets of numbers stand for the faces that the same bars serve. ``least`` is the area that
-    torsion asks of the bars within the web [mm2].
+    torsion asks of the bars within the web, ``least_all`` that which shear asks of all [mm2].
     """
 
     name: str
     numbers: tuple[Numbers, ...]
     length: float
     least: float = 0.0
+    least_all: float = 0.0
 
 
 Bars = BarLayers | TopBars
@@ -116,7 +118,7 @@ def _each_its_own(
             yield min(able, key=lambda c: order([c], [section]))
             continue
         why = ", ".join(_said(key) for key, _ in stopped[section.name].most_common(3))
-        support = "a wider support, " if "anchorage in the support" in why else ""
+        support = "a wider support, " if ANCHORAGE in why else ""
         faults.add(
             f"{what}: no bars pass every check at {section.name}: stopped by: {why}; write "
             f"{support}a deeper or wider beam, or stronger concrete"
@@ -159,22 +161,29 @@ def _bottom_layouts(size: str) -> list[BarLayers]:
     return made + sorted(two, key=lambda pair: (pair[0].number + pair[1].number, pair[1].number))
 
 
-def top_trial(rules: Rules, stirrup: str) -> Trial:
+Part = Callable[[str, TopBars], float]
+"""Give the part of the area of top bars that counts at the faces of a section, by its name."""
+
+
+def top_trial(rules: Rules, stirrup: str, part: Part) -> Trial:
     """Return the search for the least top bars of one size; each face must pass."""
     sides = {"T": 2, "L": 1, "rectangular": 0}[rules.shape]
 
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
         why: Counter[str] = Counter()
         for bars in _top_layouts(section, size, sides):
-            if bars.web.area < section.least:
+            if bars.web.area < section.least or bars.area < section.least_all:
                 why[FOR_SHEAR] += 1
                 continue
-            faces = [top_checks(dict(at), rules, bars, stirrup) for at in section.numbers]
+            counted = part(section.name, bars)
+            faces = [top_checks(dict(at), rules, bars, stirrup, counted) for at in section.numbers]
             checks = max(faces, key=lambda face: max(face.values()))
             if not fails(checks):
                 return Chosen(section.name, bars, checks), ""
-            why[worst_of(checks)] += 1
-        return None, why.most_common(1)[0][0]
+            whole = [top_checks(dict(at), rules, bars, stirrup) for at in section.numbers]
+            by_anchorage = counted < 1 and not any(map(fails, whole))
+            why[ANCHORAGE if by_anchorage else worst_of(checks)] += 1
+        return None, ANCHORAGE if why[ANCHORAGE] else why.most_common(1)[0][0]
 
     return trial
 

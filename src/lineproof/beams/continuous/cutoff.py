@@ -163,7 +163,8 @@ def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) 
     """Return from where on the continuing bars of resistance M_r do alone, on whole mm.
 
     Bottom bars: towards the near support; top bars: away from it. None where they do alone
-    everywhere (bottom), or nowhere up to the far support (top).
+    everywhere (bottom), or nowhere up to the far support (top). At an end whose restraint is
+    assumed the analysis has no moment: tension in the top is that of the other support.
     """
     designed = frame.designed
     demand = frame.demands[span - 1]
@@ -179,7 +180,7 @@ def no_further_need(frame: Frame, face: Face, span: int, near: End, M_r: float) 
         return _between(designed, face, span, near, M_r, t[max(first - 1, 0)], t[first])
     half = half_of(designed, span, near)
     last = _last_needed(needed, int(np.searchsorted(t, reach(designed, span), side="right")))
-    if last is None:
+    if last is None or support_of(span, near) in designed.restrained:
         return _between(designed, face, span, near, M_r, half, half)
     if last + 1 >= len(t):
         return None

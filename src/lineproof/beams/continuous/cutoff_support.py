@@ -243,7 +243,10 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
 def _record_fit(writers: Writers, steps: Steps, support: int, c_end: float) -> None:
     _bind_support(writers, steps, support, c_end)
     steps.line(hooks.AVAILABLE)
-    steps.check(hooks.FITS)
+    if steps.holds(hooks.FITS):
+        steps.check(hooks.FITS)
+    elif steps.check(hooks.LEAST_FITS):
+        steps.decide(hooks.IN_PART)
 
 
 def record_end_bottom(site: Site, hooked: Hooks) -> None:
@@ -315,4 +318,7 @@ def record_end_top(site: Site) -> None:
             steps = Steps(sheet, dict(site.longest(tuple(same))))
             _bind_support(writers, steps, support, _beyond(writers, support, same))
             steps.line(hooks.AVAILABLE)
-            steps.check(development.DEVELOPED)
+            if steps.holds(development.DEVELOPED):
+                steps.check(development.DEVELOPED)
+            else:
+                steps.decide(development.IN_PART)

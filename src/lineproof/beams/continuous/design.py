@@ -15,8 +15,7 @@ from typing import Any
 
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars, bars_text
 from lineproof.beams.continuous import faces, flexure_choice
-from lineproof.beams.continuous.anchorage import fits_hook
-from lineproof.beams.continuous.anchored_ends import least_anchored
+from lineproof.beams.continuous.anchored_ends import least_anchored, top_part
 from lineproof.beams.continuous.bar_choice import Bars, Chosen
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design_torsion import (
@@ -196,8 +195,9 @@ def _designed(
         model,
         pair,
         top_given,
-        lambda j, size, spread: _anchored(bare, j, size, spread=spread),
+        lambda j, bars: top_part(bare, j, bars),
         asked.top,
+        asked.all_top,
     )
     flexure_choice.refuse_unfit(bottom, "bottom_bars")
     flexure_choice.refuse_unfit(top, "top_bars")
@@ -268,11 +268,6 @@ def _raised(first: Design, made: Design) -> tuple[str, ...]:
 
 def _text(bars: Bars) -> str:
     return str(bars) if isinstance(bars, TopBars) else bars_text(bars)
-
-
-def _anchored(bare: Designed, support: int, size: str, *, spread: bool = False) -> bool:
-    """Tell whether bars of a size can be hooked into an end support, if they end there."""
-    return not bare.exterior(support) or fits_hook(bare, support, size, spread=spread)
 
 
 def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choice:

@@ -14,8 +14,8 @@ from dataclasses import dataclass, field, replace
 import numpy as np
 
 from lineproof.beams.choice import SIZES
-from lineproof.beams.continuous.anchorage import fits_hook
-from lineproof.beams.continuous.detailing_bottom import SIDES, face_tension
+from lineproof.beams.continuous.anchorage import hook_part
+from lineproof.beams.continuous.detailing_bottom import SIDES, face_demand, face_tension
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import Standing, yield_force
@@ -38,13 +38,14 @@ STEPS = 4
 class Asked:
     """What the sections must have beyond what their moments ask for.
 
-    Least areas [mm2] of the bottom bars by span and of the top bars within the web by support, the
-    size of the bars that hold the stirrups, and the area of bottom bars that must be anchored in
-    the end supports, by span [mm2].
+    Least areas [mm2] of the bottom bars by span and of the top bars by support: within the web for
+    torsion (``top``), of all for shear (``all_top``); the size of the bars that hold the stirrups,
+    and the area of bottom bars that must be anchored in the end supports, by span [mm2].
     """
 
     bottom: Mapping[int, float] = field(default_factory=dict)
     top: Mapping[int, float] = field(default_factory=dict)
+    all_top: Mapping[int, float] = field(default_factory=dict)
     holders: str = HOLDERS
     anchored: Mapping[int, float] = field(default_factory=dict)
 
@@ -53,7 +54,8 @@ class Asked:
 class Lack:
     """Bars that a face lacks at a station from the left axis of a span: their area [mm2].
 
-    ``needed`` is the area that torsion, moment and shear need there.
+    ``needed`` is the area that torsion, moment and shear need there; ``turned`` tells whether
+    torsion counts.
     """
 
     span: int
@@ -62,6 +64,7 @@ class Lack:
     near: int
     needed: float
     area: float
+    turned: bool
 
 
 @dataclass(frozen=True, slots=True)
@@ -149,6 +152,7 @@ def lacks(checks: Sequence[SpanCheck]) -> Iterator[Lack]:
                     yield Lack(
                         span, face, float(state.columns[at[1]]), support,
                         float(needed[at]) / RESERVE, float(here[at]),
+                        bool(state.v["counts"][at]),
                     )  # fmt: skip
 
 
@@ -169,7 +173,36 @@ def more(
             least = area if area > before else before * MORE_ANCHORED
             least = max(least, made.anchored.get(span, 0.0))
             made = replace(made, anchored={**made.anchored, span: least})
+    for support, area in top_end_lacks(designed, standing):
+        if support in free.supports:
+            made = _with_top(made, support, area)
     return None if made == asked else made
+
+
+def top_end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tuple[int, float]]:
+    """Give the end supports whose top bars lack anchorage for moment and shear at the inner face.
+
+    With each the area of all its top bars [mm2] that would hold as much, developed as they are.
+    """
+    last = len(designed.outline.supports)
+    for near, support, span in zip(SIDES, (1, last), (1, last - 1), strict=True):
+        layers = (*designed.bars.top[support - 1].web, *designed.bars.top[support - 1].spread)
+        if not designed.exterior(support) or not layers:
+            continue
+        counted = _anchored_area(designed, standing, "top", support)
+        needed = face_demand(designed, span, near).top.F[0] / yield_force(designed) / RESERVE
+        if 0 < counted < needed:
+            yield support, sum(layer.area for layer in layers) * float(needed) / counted
+
+
+def _anchored_area(
+    designed: Designed, standing: Iterable[Standing], face: Face, support: int
+) -> float:
+    """Return the area of bars that counts at the inner face of an end support [mm2]."""
+    span = 1 if support == 1 else support - 1
+    x = np.array([designed.outline.faces(span)[0 if support == 1 else 1]])
+    own = (bars for bars in standing if bars.run.face == face)
+    return sum(bars.run.area * float(bars.developed(x)[0]) for bars in own)
 
 
 def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tuple[int, float]]:
@@ -182,12 +215,11 @@ def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tupl
     for near, support, span in zip(SIDES, (1, last), (1, last - 1), strict=True):
         if not designed.exterior(support):
             continue
-        face = designed.outline.faces(span)[0 if support == 1 else 1]
         there = [bars for bars in standing if bars.run.face == "bottom"]
-        area = sum(bars.run.area * float(bars.developed(np.array([face]))[0]) for bars in there)
+        area = _anchored_area(designed, there, "bottom", support)
         needed = face_tension(designed, span, near) / yield_force(designed)
         hooked = {bars.run.size for bars in there if _hooked(bars.run, support)}
-        if area < needed or not all(fits_hook(designed, support, size) for size in hooked):
+        if area < needed or not all(hook_part(designed, support, size) for size in hooked):
             yield span, needed
 
 
@@ -201,9 +233,12 @@ def _with(made: Asked, before: Asked, lack: Lack, bars: SectionBars, free: Open)
         most = max(made.bottom.get(lack.span, 0.0), own + lack.area)
         return replace(made, bottom={**made.bottom, lack.span: most})
     if lack.face == "top":
-        web = bars.top[lack.near - 1].web
-        own = sum(layer.area for layer in web)
+        top = bars.top[lack.near - 1]
+        web = top.web
         if web and lack.near in free.supports:
+            own = sum(layer.area for layer in (web if lack.turned else (*web, *top.spread)))
+            if not lack.turned:
+                return _with_top(made, lack.near, own + lack.area)
             most = max(made.top.get(lack.near, 0.0), own + lack.area)
             return replace(made, top={**made.top, lack.near: most})
         if web:
@@ -211,6 +246,12 @@ def _with(made: Asked, before: Asked, lack: Lack, bars: SectionBars, free: Open)
     elif not _held_alone(bars, lack):
         return made  # given bars fail their check
     return replace(made, holders=_thicker(before.holders, lack))
+
+
+def _with_top(made: Asked, support: int, area: float) -> Asked:
+    """Return what is asked with an area of all top bars of a support [mm2]."""
+    most = max(made.all_top.get(support, 0.0), area)
+    return replace(made, all_top={**made.all_top, support: most})
 
 
 def _held_alone(bars: SectionBars, lack: Lack) -> bool:

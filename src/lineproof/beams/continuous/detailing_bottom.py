@@ -18,9 +18,9 @@ from lineproof.beams.bars import BarLayers
 from lineproof.beams.continuous.anchorage import (
     available,
     development_length,
-    has_hooks,
     holds,
     hook_at,
+    hook_part,
     value,
 )
 from lineproof.beams.continuous.cutoff import (
@@ -49,7 +49,7 @@ from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_between, split
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.resistance import stand, yield_force
-from lineproof.beams.continuous.resistance_demand import demand_at, end_tension
+from lineproof.beams.continuous.resistance_demand import SpanDemand, demand_at, end_tension
 from lineproof.standards.a23_3 import cutoff as clause
 
 CORNERS = 2
@@ -179,7 +179,9 @@ def _anchored(designed: Designed, span: int, near: End, groups: Sequence[BarRun]
             (Anchored(n) for n in numbers if _share(designed, support, groups, n)),
             Anchored(len(groups) - 1),
         )
-    hooks: tuple[Hook, ...] = ("", "90") if has_hooks(designed) else ("",)
+    sizes = {run.size for run in groups}
+    hooked = all(hook_part(designed, support, size) > 0 for size in sizes)
+    hooks: tuple[Hook, ...] = ("", "90") if hooked else ("",)
     for hook in hooks:
         for n in numbers:
             if _share(designed, support, groups, n) and _held(
@@ -210,8 +212,6 @@ def _held(
         else development_length(designed, replace(run, start=0.0, end=1.0))
         for run in inside
     ]  # fmt: skip
-    if hook and max(lengths) > l_av:
-        return False
     parts = [min(l_av / length, 1.0) for length in lengths]
     A_sd = sum(run.area * part for run, part in zip(inside, parts, strict=True))
     if A_sd * yield_force(designed) < face_tension(designed, span, near):
@@ -223,9 +223,14 @@ def _held(
 
 def face_tension(designed: Designed, span: int, near: End) -> float:
     """Return the tension of the bottom bars at the face of an end support [N]."""
-    half = half_of(designed, span, near)
-    at = demand_at(designed, span, np.array([local(designed, span, near, half)]))
+    at = face_demand(designed, span, near)
     return max(float(at.bottom.F[0]), end_tension(designed, support_of(span, near)))
+
+
+def face_demand(designed: Designed, span: int, near: End) -> SpanDemand:
+    """Return what the bars of a span carry at the face of a support."""
+    half = half_of(designed, span, near)
+    return demand_at(designed, span, np.array([local(designed, span, near, half)]))
 
 
 def limit_at_support(designed: Designed, span: int, near: End, inside: Sequence[BarRun]) -> float:

@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from lineproof.beams.continuous.anchored_ends import end_hook
 from lineproof.beams.continuous.cutoff import along, axis_of, ceil50, half_of, support_of
 from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_between
-from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.resistance import span_at
 
 
@@ -84,10 +85,21 @@ def _between(designed: Designed, span: int, corners: dict[int, BarRun]) -> BarRu
     least = 2 * max(laps) if left and right else 0.0
     if end - start < least or end <= start:
         return None
-    return BarRun(
+    run = BarRun(
         "top", 1, CORNERS, designed.bars.holders, start - laps[0], end + laps[1],
         serves="holds the stirrups",
     )  # fmt: skip
+    return replace(
+        run,
+        hook_start="" if left else _hook(designed, support_of(span, "left"), run),
+        hook_end="" if right else _hook(designed, support_of(span, "right"), run),
+    )
+
+
+def _hook(designed: Designed, support: int, run: BarRun) -> Hook:
+    """Return the hook of bars that hold the stirrups where the end of the beam is held."""
+    simple = designed.outline.supports[support - 1].kind == "simple"
+    return "" if simple or not designed.exterior(support) else end_hook(designed, support, run)
 
 
 def joined(designed: Designed, string: list[BarRun]) -> list[BarRun]:

@@ -9,7 +9,6 @@ from lineproof.beams.continuous.anchorage import (
     available,
     development_length,
     fits_hook,
-    has_hooks,
 )
 from lineproof.beams.continuous.cutoff import (
     STEP,
@@ -105,7 +104,7 @@ def _anchors(designed: Designed, support: int, run: BarRun) -> bool:
     if development_length(designed, run) <= available(designed, support):
         return True
     spread = run.place == "overhang"
-    return has_hooks(designed) and fits_hook(designed, support, run.size, spread=spread)
+    return fits_hook(designed, support, run.size, spread=spread)
 
 
 def others_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:

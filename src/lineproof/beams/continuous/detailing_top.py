@@ -11,13 +11,8 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
-from lineproof.beams.continuous.anchorage import (
-    available,
-    development_length,
-    fits_hook,
-    has_hooks,
-    value,
-)
+from lineproof.beams.continuous.anchorage import development_length, value
+from lineproof.beams.continuous.anchored_ends import end_hook
 from lineproof.beams.continuous.cutoff import (
     MARGIN,
     STEP,
@@ -51,7 +46,7 @@ from lineproof.beams.continuous.detailing_meeting import (
 )
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
-from lineproof.beams.continuous.layout import BarRun, Hook
+from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import Standing, stand
 from lineproof.standards.a23_3 import cutoff as clause
 
@@ -215,19 +210,6 @@ def _end(designed: Designed, support: int, side: End, run: BarRun, reach: float 
     return placed(side, run, x, end_hook(designed, support, run))
 
 
-def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
-    """Return the hook of top bars at an end support: none where they develop straight.
-
-    Nor where none fits and no moment stands: the end is free to rotate, no restraint is assumed.
-    """
-    l_d = development_length(designed, run)
-    if l_d <= available(designed, support) or not has_hooks(designed):
-        return ""
-    simple = designed.outline.supports[support - 1].kind == "simple"
-    free = simple and support not in designed.restrained
-    return "" if free and not fits_hook(designed, support, run.size) else "90"
-
-
 def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], number: int) -> Reach:
     """Return how far long and short bars reach into a span."""
     designed = frame.designed
@@ -239,7 +221,7 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
     else:
         long, through = _long(frame, span, near, groups, inflection)
     work = Work.of(frame, (span, near), groups, number, own)
-    short = long
+    short, past = long, long
     if number < len(groups):
         long, short = _short(work, long)
     if not through and not designed.cantilever(span):
@@ -247,6 +229,8 @@ def _reach(frame: Frame, span: int, near: End, groups: tuple[BarRun, ...], numbe
     if through:
         whole = short >= long
         long = _meeting(work)
+        if number > 1 and inflection is not None:
+            long = max(long, past)  # the corner bars, which meet those beyond, are no third
         short = long if whole else short
     long = min(long, furthest(designed, span, near))
     found = Reach(long, min(short, long), through)

@@ -28,7 +28,7 @@ from lineproof.standards.a23_3.bars import BARS
 
 _SAME = 1e-9
 NOTE = (
-    "Given bars count here in proportion to the distance to their nearer end, in full from their "
+    "Bars count here in proportion to the distance to their nearer end, in full from their "
     "development length on; two bars that are lapped count as one."
 )
 
@@ -148,11 +148,21 @@ Counted = tuple[Group, Developed | None]
 
 
 def _groups(designed: Designed, bars: Iterable[Developed]) -> tuple[Counted, ...]:
-    """Return the bars by layer and size, those counted in part run by run."""
+    """Return the bars by layer and size, those counted in part by their lengths as well."""
     kept = tuple(bars)
     whole = groups_met(designed, (each.run for each in kept if each.whole))
-    part = ((groups_met(designed, (each.run,))[0], each) for each in kept if not each.whole)
-    return (*((group, None) for group in whole), *part)
+    part: dict[tuple[float, float], list[Developed]] = {}
+    for each in kept:
+        if not each.whole:
+            part.setdefault((each.length, each.rise), []).append(each)
+    return (
+        *((group, None) for group in whole),
+        *(
+            (group, alike[0])
+            for alike in part.values()
+            for group in groups_met(designed, (each.run for each in alike))
+        ),
+    )
 
 
 def record_groups(steps: Steps, groups: Sequence[Counted], where: str) -> None:
@@ -191,6 +201,22 @@ def _record_group(steps: Steps, counted: Counted, mark: str, where: str) -> tupl
     return A_s, record_second_depth(steps, depth, mark, d_b, over)
 
 
+def counted_part(length: float, rise: float) -> float:
+    """Return the part of bars that counts ``length`` from their end, of the ``rise`` needed [mm].
+
+    Both lengths are rounded as they are recorded.
+    """
+    return min(_given_length(length) / _needed_length(rise), 1.0)
+
+
+def _given_length(length: float) -> float:
+    return math.floor(10 * length * (1 + _SAME)) / 10
+
+
+def _needed_length(rise: float) -> float:
+    return math.ceil(10 * rise * (1 - _SAME)) / 10
+
+
 def _record_part(steps: Steps, A_s: Entry, short: Developed, mark: str, where: str) -> Entry:
     """Record the area of bars that are developed in part, from a place to their nearer end.
 
@@ -198,11 +224,11 @@ def _record_part(steps: Steps, A_s: Entry, short: Developed, mark: str, where: s
     """
     given = steps.sheet.given
     l_av = given(
-        f"l_av{mark}", plain(math.floor(10 * short.length) / 10, "mm"),
+        f"l_av{mark}", plain(_given_length(short.length), "mm"),
         f"length from {where} to the end of the bars", source="as laid",
     )  # fmt: skip
     l_d = given(
-        f"l_d{mark}", plain(math.ceil(10 * short.rise) / 10, "mm"), "length needed",
+        f"l_d{mark}", plain(_needed_length(short.rise), "mm"), "length needed",
         source="anchorage, the same bars",
     )  # fmt: skip
     return steps.line(development.DEVELOPED_AREA, f"A_sd{mark}", A_s=A_s, l_av=l_av, l_d=l_d)

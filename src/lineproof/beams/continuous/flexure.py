@@ -165,8 +165,11 @@ def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
 
 
 def _top_in_part(design: Design, face: Face, top: TopBars) -> dict[str, Entry]:
-    """Record given top bars where they count in part; return their d and A_s, else nothing."""
-    if not design.given:
+    """Record top bars where they count in part; return their d and A_s, else nothing.
+
+    Chosen ones do only in an end support.
+    """
+    if not design.given and 1 < face.support <= design.model.spans:
         return {}
     title = f"{face.name.capitalize()}: top bars"
     area = top.area if top.of_one_size else None

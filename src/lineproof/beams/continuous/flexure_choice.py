@@ -9,6 +9,7 @@ from dataclasses import replace
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars
 from lineproof.beams.choice import bars_for
 from lineproof.beams.continuous.bar_choice import (
+    ANCHORAGE,
     Chosen,
     Section,
     bottom_trial,
@@ -103,7 +104,7 @@ def choose_bottom(
     def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
         at_ends = least_anchored(numbered[section.name], size) if least_anchored else 0.0
         if math.isinf(at_ends):
-            return None, "anchorage in the support"
+            return None, ANCHORAGE
         return search(replace(section, least=max(section.least, at_ends)), size)
 
     found = choose(list(sections.values()), trial, "bottom_bars")
@@ -114,14 +115,16 @@ def choose_top(
     model: Model,
     pair: CodePair,
     given: Mapping[int, TopBars],
-    anchored: Callable[[int, str, bool], bool],
+    part: Callable[[int, TopBars], float],
     least: Mapping[int, float] | None = None,
+    least_all: Mapping[int, float] | None = None,
 ) -> dict[int, Chosen]:
     """Return the top bars of every support that has a moment with the top in tension.
 
     Of bars given along the beam: no item for a support that none of them cross.
 
-    ``least`` is the area within the web that torsion asks for, by support.
+    ``part`` gives the part of the area that counts at the faces of a support; ``least`` is the
+    area within the web that torsion asks for, ``least_all`` that of all which shear does.
     """
     rules, stirrup, materials = rules_of(model), model.inputs.stirrup, materials_of(model, pair)
     made: dict[int, Chosen] = {}
@@ -133,22 +136,14 @@ def choose_top(
             if model.inputs.bar_runs is None:  # else none stand here as given: none are chosen
                 sections[support] = Section(
                     name, tuple(numbers), _top_length(model, support),
-                    (least or {}).get(support, 0.0),
+                    (least or {}).get(support, 0.0), (least_all or {}).get(support, 0.0),
                 )  # fmt: skip
             continue
         faces = [top_checks(dict(at), rules, top, stirrup) for at in numbers]
         made[support] = Chosen(name, top, max(faces, key=lambda face: max(face.values())))
     numbered = {section.name: support for support, section in sections.items()}
-    search = top_trial(rules, stirrup)
-
-    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
-        found, why = search(section, size)
-        spread = isinstance(found.bars, TopBars) and found.bars.overhang > 0 if found else False
-        if not anchored(numbered[section.name], size, spread):
-            return None, "anchorage in the support"
-        return found, why
-
-    found = choose(list(sections.values()), trial, "top_bars")
+    search = top_trial(rules, stirrup, lambda name, bars: part(numbered[name], bars))
+    found = choose(list(sections.values()), search, "top_bars")
     return made | dict(zip(sections, found, strict=True))
 
 

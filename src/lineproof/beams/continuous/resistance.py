@@ -91,7 +91,8 @@ def lap_pairs(
 ) -> tuple[tuple[int, int], ...]:
     """Return which runs are lapped, by their places in the list: one that ends, one that starts.
 
-    Every end has one mate at most: of several a like one, then the one with the longest overlap.
+    Every end has one mate at most: of several a like one, then one that serves the same, as pieces
+    of one bar do, then the one with the longest overlap.
     """
     order = sorted(range(len(runs)), key=lambda j: runs[j].start)
     starts = [runs[j].start for j in order]
@@ -105,8 +106,13 @@ def lap_pairs(
     ended: set[int] = set()
     started: set[int] = set()
     made = []
-    found.sort(key=lambda row: (not alike(runs[row[1]], runs[row[2]]), -row[0], row[1], row[2]))
-    for _, i, j in found:
+
+    def rank(row: tuple[float, int, int]) -> tuple[bool, bool, float, int, int]:
+        overlap, i, j = row
+        first, second = runs[i], runs[j]
+        return not alike(first, second), first.serves != second.serves, -overlap, i, j
+
+    for _, i, j in sorted(found, key=rank):
         if i not in ended and j not in started:
             ended.add(i)
             started.add(j)

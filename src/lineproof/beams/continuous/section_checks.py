@@ -198,13 +198,16 @@ def bottom_checks(at: Numbers, rules: Rules, layers: BarLayers, stirrup: str) ->
     return made | _cracks(at, crack_control.TENSION_AREA)
 
 
-def top_checks(at: Numbers, rules: Rules, top: TopBars, stirrup: str) -> Checks:
+def top_checks(
+    at: Numbers, rules: Rules, top: TopBars, stirrup: str, counted: float = 1.0
+) -> Checks:
     """Return every check of top bars at a section with the top in tension: the web compressed.
 
     ``at`` holds materials, geometry (b_w, h, l, and b_f, b_o, h_f where there is a slab), M_f and
-    M_crn.
+    M_crn. ``counted`` is the part of the area that the support anchors.
     """
     made = put_top(at, rules.shape, top, stirrup)
+    at["A_s"] *= counted
     flange = at.pop("h_f", None)
     at["b"] = at["b_w"]
     made |= _strength(at)

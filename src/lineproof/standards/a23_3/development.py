@@ -199,6 +199,16 @@ DEVELOPED = _criterion(
     no="The bars do NOT develop their yield strength.",
     key="development",
 )
+IN_PART = _criterion(
+    "l_av < l_d",
+    clause="12.2.5",
+    title="Bars developed in part",
+    basis=FROM_MEMORY,
+    yes="The bars count with the part l_av/l_d of their area, at the face of the support and "
+    "wherever else they are used: more steel than required lets the length be shorter.",
+    no="The bars are developed in full.",
+    key="development-in-part",
+)
 DEVELOPED_AREA = _formula(
     "A_sd = A_s*min(l_av/l_d, 1)",
     clause="11.3.6.4",
@@ -249,5 +259,7 @@ FORMULAS = (
     L_D_EXCESS, L_D_BUNDLE, DEVELOPED_AREA, DEVELOPED_TOTAL, COMPRESSION_BASIC, COMPRESSION,
     COMPRESSION_TIED,
 )  # fmt: skip
-CRITERIA = (TOP_BAR, COVERED, SPACED, SPACED_SLAB, DEVELOPED, DEVELOPED_COMPRESSION)
+CRITERIA = (
+    TOP_BAR, COVERED, SPACED, SPACED_SLAB, DEVELOPED, IN_PART, DEVELOPED_COMPRESSION,
+)  # fmt: skip
 TABLES = (LOCATION, COATING, DENSITY, SIZE, BUNDLES)

@@ -166,6 +166,26 @@ FITS = _criterion(
     no="The hook does NOT fit: thinner bars, a deeper support or more bars.",
     key="hook-fits",
 )
+LEAST_FITS = _criterion(
+    "max(8*d_b, 150) <= l_av",
+    clause="12.5.1",
+    title="Least length for the hook",
+    basis=FROM_MEMORY,
+    numbers={"150": "mm"},
+    yes="The hook has its least length.",
+    no="The hook does NOT fit: thinner bars or a wider support.",
+    key="hook-least-length",
+)
+IN_PART = _criterion(
+    "l_av < l_dh",
+    clause="12.5.3",
+    title="Hooks developed in part",
+    basis=FROM_MEMORY,
+    yes="The bars count with the part l_av/l_dh of their area, at the face of the support and "
+    "wherever else they are used: more steel than required lets the hook be shorter.",
+    no="The hook is developed in full.",
+    key="hook-in-part",
+)
 
 
 def basic_length(pair: CodePair) -> Formula:
@@ -183,5 +203,5 @@ def basic_length(pair: CodePair) -> Formula:
 
 
 FORMULAS = (BASIC, L_DH, L_DH_EXCESS, SIDE_COVER, SIDE_COVER_COLUMN, FACE_COVER, AVAILABLE)
-CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, TIES_CLEAR, FITS)
+CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, TIES_CLEAR, FITS, LEAST_FITS, IN_PART)
 TABLES = (COVER_FACTORS, TIE_FACTORS, DENSITY_FACTORS, COATING_FACTORS)
