@@ -35,11 +35,15 @@ NOTE = (
 
 @dataclass(frozen=True, slots=True)
 class Developed:
-    """Bars that count at a place: in full, or for ``length`` of the ``rise`` needed [mm]."""
+    """Bars that count at a place: in full, or for ``length`` of the ``rise`` needed [mm].
+
+    ``from_start`` tells from which end of the bars.
+    """
 
     run: BarRun
     length: float
     rise: float
+    from_start: bool = True
 
     @property
     def whole(self) -> bool:
@@ -81,9 +85,11 @@ def developed_at(standing: Sequence[Standing], face: Face, x: float) -> tuple[De
 
 def _of(bars: Standing, x: float) -> Developed:
     """Return a run with the end that governs: its distance from x, and that needed."""
-    ends = ((x - bars.run.start, bars.rise_start), (bars.run.end - x, bars.rise_end))
-    length, rise = min(ends, key=lambda end: end[0] / end[1])
-    return Developed(bars.run, length, rise)
+    ends = (
+        Developed(bars.run, x - bars.run.start, bars.rise_start),
+        Developed(bars.run, bars.run.end - x, bars.rise_end, from_start=False),
+    )
+    return min(ends, key=lambda end: end.length / end.rise)
 
 
 def area_of(counted: Iterable[Developed]) -> float:
@@ -148,13 +154,13 @@ Counted = tuple[Group, Developed | None]
 
 
 def _groups(designed: Designed, bars: Iterable[Developed]) -> tuple[Counted, ...]:
-    """Return the bars by layer and size, those counted in part by their lengths as well."""
+    """Return the bars by layer and size, those counted in part by their ends as well."""
     kept = tuple(bars)
     whole = groups_met(designed, (each.run for each in kept if each.whole))
-    part: dict[tuple[float, float], list[Developed]] = {}
+    part: dict[tuple[float, float, bool], list[Developed]] = {}
     for each in kept:
         if not each.whole:
-            part.setdefault((each.length, each.rise), []).append(each)
+            part.setdefault((each.length, each.rise, each.from_start), []).append(each)
     return (
         *((group, None) for group in whole),
         *(
