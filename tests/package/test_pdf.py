@@ -332,6 +332,26 @@ def test_many_calcs_share_one_cover(record: Record, failing_record: Record) -> N
     assert text.count("Permit to practice") == 1
 
 
+def test_the_place_of_the_seal_stands_on_one_page() -> None:
+    """Wherever the facts begin on the cover; where a page ended the place was cut in two."""
+    functions = (folder("templates") / "package.typ").read_text(encoding="utf-8")
+    source = f"""#let widest = 178
+{functions}
+#set document(title: "t", date: datetime(year: 2026, month: 1, day: 1))
+#set text(font: serif)
+#set page("us-letter", margin: 20mm)
+#for n in range(9) {{
+  v(n * 25mm)
+  sealed-facts(seal-area("Seal", "Signature"), ("Address", "14 Alder Row"), ("Checked by", "A.B."))
+  pagebreak(weak: true)
+}}"""
+    pages = pypdf.PdfReader(io.BytesIO(compile_pdf(source, "[]", build_date()))).pages
+    texts = [page.extract_text() for page in pages]
+    held = [text for text in texts if "Seal" in text]
+    assert len(held) == 9
+    assert all("Signature" in text and "Address" in text for text in held)
+
+
 def test_marks_are_printed_beside_their_line(record: Record) -> None:
     """A reviewer's note stands at the line it belongs to."""
     text = text_of(printed(record, marks={"flexure/M_r": ["changed since revision A"]}))
