@@ -372,3 +372,13 @@ def test_two_calcs_of_one_id(beam_file: Path, capsys: pytest.CaptureFixture[str]
     other.write_bytes(beam_file.read_bytes())
     said = refused(["issue", str(beam_file), str(other)], capsys)
     assert "its calc id 'B1' is that of" in said
+    assert "give each calc its own in Sheet.open(...)" in said
+
+
+def test_a_notebook_named_in_two_ways_is_one(
+    beam_file: Path, capsys: pytest.CaptureFixture[str], monkeypatch: pytest.MonkeyPatch
+) -> None:
+    monkeypatch.chdir(beam_file.parent)
+    assert main(["issue", "beam.ipynb", str(beam_file), "--into", "out"]) == 0
+    assert files_in(Path("out")) == NAMES
+    assert capsys.readouterr().err.splitlines()[:1] == ["running beam.ipynb"]

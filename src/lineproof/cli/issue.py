@@ -80,7 +80,7 @@ def _check_project(reruns: Sequence[Rerun]) -> None:
         if record.calc_id in seen:
             faults.add(
                 f"{rerun.path}: its calc id {record.calc_id!r} is that of {seen[record.calc_id]}; "
-                "give each calc its own"
+                "give each calc its own in Sheet.open(...)"
             )
         seen[record.calc_id] = rerun.path
     faults.raise_if_any()

@@ -61,13 +61,21 @@ def load_all(paths: Iterable[Path], *, need_record: bool = True) -> list[Stored]
     Without ``need_record`` it does not matter what an earlier run has left in them.
     """
     faults, found = FaultList(), []
-    for path in dict.fromkeys(paths):
+    for path in _each_once(paths):
         try:
             found.append(_load(path, need_record=need_record))
         except UserError as error:
             faults.take(error)
     faults.raise_if_any()
     return found
+
+
+def _each_once(paths: Iterable[Path]) -> list[Path]:
+    """Return each file once, as first named: ``a.ipynb`` and ``./a.ipynb`` are one."""
+    named: dict[Path, Path] = {}
+    for path in paths:
+        named.setdefault(path.resolve(), path)
+    return list(named.values())
 
 
 def _load(path: Path, *, need_record: bool) -> Stored:
