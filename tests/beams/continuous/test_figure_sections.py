@@ -217,6 +217,16 @@ def test_sections_of_a_beam() -> None:
     assert sections_of(cantilever, marked(cantilever))[0][1] == 2275.0
 
 
+def test_ties_within_the_support_are_not_the_stirrups_of_its_face() -> None:
+    """At the face the ties are 30 mm away and the first stirrup 75: the section has the stirrup."""
+    zones = (
+        StirrupZone(1, 300.0, 7000.0, 21, 335.0, "10M"),
+        StirrupZone(1, 60.0, 195.0, 4, 45.0, "10M", around_hooks=True),
+    )
+    steel = steel_at(BEAM, Detailing(STRING, zones), 225.0, 20.0)
+    assert steel.zone is zones[0]
+
+
 def test_section_says_what_it_shows() -> None:
     """Marks, numbers and sizes as names and in the alternative text."""
     figure = section_at(BEAM, marked(BEAM), 7375.0, letter="C", tension="top")

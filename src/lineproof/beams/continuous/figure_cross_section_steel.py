@@ -106,11 +106,12 @@ def steel_at(
 ) -> Steel:
     """Return the steel at a station; the stirrups beside it where it lies between zones.
 
-    ``stirrup`` is the size that bars are placed for in a span without any.
+    Ties around hooks are none of them: they stand within the support. ``stirrup`` is the size that
+    bars are placed for in a span without any.
     """
     span = span_of(outline, x)
     runs = tuple(run for run in detailing.bars if run.start <= x <= run.end)
-    zones = [zone for zone in detailing.stirrups if zone.span == span]
+    zones = [zone for zone in detailing.stirrups if zone.span == span and not zone.around_hooks]
     zone = min(zones, key=lambda each: _beyond(each, x), default=None)
     size = zone.size if zone else stirrup
     diameter = BARS.number(size, "d_b") if size else 0.0
