@@ -348,7 +348,16 @@ INTERFACE = (
         {"C_f": 1088.6, "b_o": 300, "b": 900, "b_w": 300},
         "1088.6*300/(900 - 300) = 544.3",
     ),
-    W("interface.OVERHANG_TENSION", {**S, "n_o": 3, "A_b": 200}, "0.85*3*200*0.4 = 204"),
+    W(
+        "interface.OVERHANG_TENSION",
+        {**S, "n_o": 3, "A_b": 200, "M_f": 90, "M_r": 150},
+        "0.85*3*200*0.4*90/150 = 122.4",
+    ),
+    W(
+        "interface.OVERHANG_TENSION",
+        {**S, "n_o": 3, "A_b": 200, "M_f": 160, "M_r": 150},
+        "0.85*3*200*0.4*1 = 204",
+    ),
     W("interface.LENGTH", {"x_vz": 200, "x_vm": 3144}, "max(200 - 3144, 3144 - 200)/1000 = 2.944"),
     W(
         "interface.LENGTH_RESTRAINED",

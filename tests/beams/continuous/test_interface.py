@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import pytest
 
+from lineproof.beams.continuous.cures_sought import cures_of
 from lineproof.beams.continuous.interface import (
     Beside,
     SlabBars,
@@ -46,7 +47,10 @@ def test_independent_check_13() -> None:
 
 
 def test_block_in_the_web_and_bars_in_the_overhang() -> None:
-    """1088.6 x 300/600 = 544.3 kN; 3-15M in the overhang: 0.85 x 3 x 200 x 0.4 = 204 kN."""
+    """1088.6 x 300/600 = 544.3 kN; 3-15M in the overhang: 0.85 x 3 x 200 x 0.4 = 204 kN.
+
+    Under 96 kN.m of a resistance of 160: 204 x 0.6 = 122.4 kN.
+    """
     sheet, slab = new_sheet(CHECKED), SlabBars(1, "10M", 250.0)
     with sheet.part("interface-1", "Sagging"):
         steps = place(
@@ -54,12 +58,27 @@ def test_block_in_the_web_and_bars_in_the_overhang() -> None:
         )
         record_interface(steps, slab, block_in_web=True)
     with sheet.part("interface-top-3", "Hogging"):
-        steps = place(sheet, n_o="3", h_f="100 mm", l_vf="1.5 m")
+        steps = place(sheet, n_o="3", h_f="100 mm", l_vf="1.5 m", M_f="96 kN.m", M_r="160 kN.m")
         steps.bind(A_b=sheet.given("A_bt", "200 mm2"))
         record_interface_top(steps, slab)
     made = sheet.close()
     assert number(made, "interface-1/F_o") == pytest.approx(544.3, abs=1)
-    assert number(made, "interface-top-3/F_o") == pytest.approx(204, abs=0.5)
+    assert number(made, "interface-top-3/F_o") == pytest.approx(122.4, abs=0.5)
+
+
+def test_closer_slab_bars_are_told_as_a_cure() -> None:
+    """204 kN over 1 m of 100 mm: 2.04 MPa.
+
+    0.65 (1 + 1.4 x 400 x 100/(100 s)) reaches it at s = 560/(2.04/0.65 - 1) = 262 mm: 250 mm.
+    """
+    sheet = new_sheet(CHECKED)
+    with sheet.part("interface-top", "Hogging"):
+        steps = place(sheet, n_o="3", h_f="100 mm", l_vf="1 m", M_f="90 kN.m", M_r="90 kN.m")
+        steps.bind(A_b=sheet.given("A_bt", "200 mm2"))
+        record_interface_top(steps, SlabBars(1, "10M", 400.0))
+    check = sheet.entry("interface-top/interface-shear")
+    assert not check
+    assert cures_of(check)[0].text == "these slab bars across the web at 250 mm or less"
 
 
 def test_length_beside_the_largest_moment() -> None:

@@ -73,7 +73,12 @@ def test_shear_with_forces_line_by_line(changes: Mapping[str, Any]) -> None:
 
 
 def test_assumed_restraint_adds_to_shear_and_reaction_and_shortens_the_flange() -> None:
-    """M = w l^2/24 on a girder: M/l = w l/24; the flange takes it over 7600/12 - 200 = 433 mm."""
+    """M = w l^2/24 on a girder: M/l = w l/24; the flange takes it over 7600/12 - 200 = 433 mm.
+
+    M_f = 115.007 kN.m; 4-20M at d = 568.95: a = 408 000/(0.802 x 0.65 x 32 x 380) = 64.36 mm, M_r =
+    408 x (0.56895 - 0.03218) = 219.0 kN.m. One 20M in each overhang: 0.85 x 300 x 0.4 = 102 kN at
+    yield, 102 x 115.007/219.0 = 53.56 kN with the moment.
+    """
     beam = analysed(slab_bars="2 x 15M at 150 mm")
     run(beam, ("flexure", "shear"))
     sheet = beam.sheet
@@ -85,6 +90,10 @@ def test_assumed_restraint_adds_to_shear_and_reaction_and_shortens_the_flange() 
     assert sheet.entry("support-1/R_f").value == pytest.approx(R + more)
     l_vf = sheet.entry("interface-hog-1-right/l_vf").value
     assert l_vf == pytest.approx(7600 / 12 - 200, abs=0.01)
+    assert sheet.entry("interface-hog-1-right/F_o").value == pytest.approx(53.56e3, rel=1e-3)
+    share = sheet.entry("hog-2-right/M_f").value / sheet.entry("hog-2-left/M_r").value
+    F_o = sheet.entry("interface-hog-2-right/F_o").value
+    assert F_o == pytest.approx(102e3 * share)  # the face that shares the section of the other
     assert "shear-1-right-restraint" not in {part.key for part in sheet.parts}
 
 

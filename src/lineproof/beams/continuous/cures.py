@@ -136,6 +136,13 @@ def spacing(s: float, limit: float = CLOSEST_STIRRUPS) -> Variable:
     return Variable(down(s, limit, 25), "stirrups at {} mm", "or less", none)
 
 
+def slab_spacing(s_f: float, limit: float = 100) -> Variable:
+    """Return the spacing of the slab bars across the web, in steps of 25 mm."""
+    none = f"no spacing of the slab bars down to {limit:g} mm"
+    words = "these slab bars across the web at {} mm"
+    return Variable(down(s_f, limit, 25), words, "or less", none)
+
+
 def bar_count(number: int, limit: int = 20) -> Variable:
     """Return the number of bars of their size beside each other."""
     none = f"no number of bars up to {limit}"

@@ -209,7 +209,7 @@ def _value(name: str, check: Entry, bound: Mapping[str, Entry]) -> Sought | None
         return None
     makers: Mapping[str, Callable[[float], Variable]] = {
         "h": find.depth, "b_w": find.width, "f_c": find.concrete, "s": find.spacing,
-        "b_sp": _support, "n_o": _overhang, "n_h": _hangers,
+        "b_sp": _support, "n_o": _overhang, "n_h": _hangers, "s_f": find.slab_spacing,
     }  # fmt: skip
     return _single(name, root, makers[name](root.value))
 

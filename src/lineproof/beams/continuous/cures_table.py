@@ -51,7 +51,7 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
     cutoff.DEVELOPED_AT_ZERO_MOMENT: ("bars", "A_s", "h", "f_c"),
     bearing.STRENGTH: ("b_w", "f_c"),
     shear_bars.HANGERS_PROVIDED: ("n_h",),
-    interface.STRENGTH: ("f_c",),
+    interface.STRENGTH: ("s_f", "f_c"),
 }
 """What is changed, each alone, by check; ``A_s`` is an area of bars, ``bars`` their size."""
 LONGER: Mapping[Criterion, str] = {

@@ -32,6 +32,11 @@ class Face:
         return f"hog-{self.support}-{self.side}"
 
     @property
+    def across(self) -> str:
+        """Key of the part of the other face of its support."""
+        return Face(self.support, other(self.side)).key
+
+    @property
     def name(self) -> str:
         """Its name in words."""
         return f"support {self.support}, {self.side} face"

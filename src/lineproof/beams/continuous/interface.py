@@ -153,7 +153,9 @@ def record_interface(steps: Steps, slab: SlabBars, *, block_in_web: bool) -> Non
 def record_interface_top(steps: Steps, slab: SlabBars) -> None:
     """Record inside the open part the same for top bars that lie in the overhang.
 
-    Needs n_o, ``A_b`` of the top bars, h_f and l_vf in place.
+    Their tension follows the moment of the section, which is that of all its bars at yield at M_r;
+    below it the lever arm is longer, so that they take less than their share. Needs n_o, ``A_b`` of
+    the top bars, M_f, M_r, h_f and l_vf in place.
     """
     steps.line(interface.OVERHANG_TENSION)
     _record_plane(steps, slab)

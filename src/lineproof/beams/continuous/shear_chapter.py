@@ -67,14 +67,18 @@ THROUGH = (
 )
 
 
-def _faces_with_overhang(model: Model) -> list[FaceOfSupport]:
-    """Return the faces in whose parts bars of the overhang are recorded."""
-    made = []
+def _faces_with_overhang(model: Model) -> list[tuple[FaceOfSupport, Mapping[str, Entry]]]:
+    """Return the faces with tension in bars of the overhang, each with its M_f and what takes it.
+
+    The milder face of a support has the section of the other; its moment may fall off faster.
+    """
+    made: list[tuple[FaceOfSupport, Mapping[str, Entry]]] = []
     parts = {part.key: part.entries for part in model.sheet.parts}
     for face in faces_of(model):
-        number = parts.get(face.key, {}).get("n_o")
-        if number is not None and number.value > 0:
-            made.append(face)
+        own = parts.get(face.key, {})
+        held = own if "M_r" in own else parts.get(face.across, {})
+        if "M_f" in own and "n_o" in held and held["n_o"].value > 0:
+            made.append((face, {**held, "M_f": own["M_f"]}))
     return made
 
 
@@ -359,13 +363,13 @@ def _record_interfaces(design: Design) -> None:
             steps.bind(**{n: entries[n] for n in ("A_s", "C_f") if n in entries})
             record_length(steps, beside_sag(model.forces, span))
             record_interface(steps, slab, block_in_web="C_f" in entries)
-    for face in _faces_with_overhang(model):
-        entries = sheet.entries_of(face.key)
+    for face, held in _faces_with_overhang(model):
         with sheet.part(
             f"interface-{face.key}", f"{face.name.capitalize()}: flange and web, negative moment"
         ):
             steps = _flange_steps(sheet, model, face.span)
-            steps.bind(n_o=entries["n_o"], A_b=entries.get("A_bo", entries["A_b"]))
+            steps.bind(n_o=held["n_o"], A_b=held.get("A_bo", held["A_b"]))
+            steps.bind(M_f=held["M_f"], M_r=held["M_r"])
             _record_to_inflection(steps, model, face)
             record_interface_top(steps, slab)
 

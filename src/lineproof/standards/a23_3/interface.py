@@ -97,9 +97,9 @@ OVERHANG_BLOCK_IN_WEB = _formula(
     basis=MECHANICS,
 )
 OVERHANG_TENSION = _formula(
-    "F_o = phi_s*n_o*A_b*f_y",
+    "F_o = phi_s*n_o*A_b*f_y*min(M_f/M_r, 1)",
     clause="11.5",
-    title="Tension in one overhang, top bars at yield",
+    title="Tension in one overhang by the top bars in it, with the moment, at most at yield",
     basis=MECHANICS,
 )
 LENGTH = _formula(
