@@ -95,6 +95,16 @@ def test_summary_pages_hold_them_in_order_before_the_working(holding: Record) ->
     in_order(body, [f'id="front/{row}"' for row in FRONT] + ["Checks by part", "Working, B9"])
 
 
+def test_a_high_drawing_does_not_stand_before_the_heading_of_its_summary(holding: Record) -> None:
+    """Of 195 mm: the table behind the heading has no room on the page, the drawing has."""
+    made = copy.deepcopy(holding)
+    (drawn,) = [e for p in made["parts"] for e in p["entries"] if e["id"] == FRONT[0]]
+    drawn["figure"]["height"] = 195.0
+    texts = pages(to_pdf(build_package([made])))
+    first = min(i for i, text in enumerate(texts) if TITLES[0] in text and "Contents" not in text)
+    assert "Summary, B9" in texts[first]
+
+
 def test_the_working_points_to_what_stands_in_front(holding: Record) -> None:
     html = to_html(build_package([holding]))
     working = html[html.index('id="sheet-working"') :]
