@@ -162,7 +162,7 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     "no slab": ({"h_f": None}, "h_f: a beam of shape 'T' needs its slab; write '140 mm'"),
     "rectangle with a slab": (
         {"shape": "rectangular", "floor_weight": "0 kPa"},
-        "h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'",
+        "h_f: a rectangular beam has no flange; write h_f = None, or shape = 'T'",
     ),
     "rectangle without its floor": (
         {"shape": "rectangular", "h_f": None},

@@ -277,7 +277,7 @@ def check_flange(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Fa
             else "floor_weight: the slab of a T or an L is counted from h_f; write None"
         )
     if shape == "rectangular" and given["h_f"] is not None:
-        faults.add("h_f: a rectangular beam has no flange; leave it out, or write shape = 'T'")
+        faults.add("h_f: a rectangular beam has no flange; write h_f = None, or shape = 'T'")
     if shape == "L" and given["tributary_width"] is None:
         faults.add("tributary_width: an edge beam needs it; write for example '1.7 m'")
     cover = fields["cover"]

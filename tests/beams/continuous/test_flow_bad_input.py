@@ -311,7 +311,8 @@ def test_a_weight_that_does_not_go_with_the_density_of_the_concrete() -> None:
     matches(
         refused_at_start(gamma_c="2500 kg/m3"),
         "gamma_w: concrete of 2500 kg/m3 does not weigh the usual 24 kN/m3 with its steel; write "
-        "the unit weight of the reinforced concrete, for example '25.6 kN/m3'",
+        "that of the reinforced concrete into the call that starts the beam, for example gamma_w = "
+        "'25.6 kN/m3'",
     )
     matches(
         refused_at_start(gamma_w="20 kN/m3"),
@@ -350,7 +351,7 @@ def test_inputs_that_would_change_nothing_are_refused() -> None:
         refused_at_start(
             shape="rectangular", h_f=None, floor_weight="3.4 kPa", slab_bars="2 x 10M at 300 mm"
         ),
-        "slab_bars: a rectangular beam has no flange; leave slab_bars out",
+        "slab_bars: a rectangular beam has no flange; write slab_bars = None",
     )
 
 

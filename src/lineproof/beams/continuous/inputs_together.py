@@ -53,7 +53,8 @@ def check_unit_weight(fields: Mapping[str, Any], faults: FaultList) -> None:
     elif not LEAST_NORMAL <= gamma_c.value <= USUAL_DENSITY:
         faults.add(
             f"gamma_w: concrete of {gamma_c.text} does not weigh the usual 24 kN/m3 with its "
-            f"steel; write the unit weight of the reinforced concrete, for example {likely}"
+            f"steel; write that of the reinforced concrete into the call that starts the beam, for "
+            f"example gamma_w = {likely}"
         )
 
 
@@ -61,7 +62,7 @@ def check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Faul
     """Refuse a shape without the slab that it needs, and a slab that does not go with it."""
     check_flange(fields, given, faults)
     if fields["shape"] == "rectangular" and given["slab_bars"] is not None:
-        faults.add("slab_bars: a rectangular beam has no flange; leave slab_bars out")
+        faults.add("slab_bars: a rectangular beam has no flange; write slab_bars = None")
 
 
 def check_bars_given(fields: Mapping[str, Any], faults: FaultList) -> None:
