@@ -3,20 +3,20 @@
 from __future__ import annotations
 
 from dataclasses import replace
-from itertools import product
+from itertools import combinations, product
 from typing import Any
 
 import pytest
-from shapely import Point, box
+from shapely import LineString, Point, box
 
 from lineproof.beams.continuous.bending import BentShape, bent_bar
 from lineproof.beams.continuous.figure_bends import COLUMNS, bends_figures
 from lineproof.beams.continuous.figure_chain import chain
 from lineproof.beams.continuous.figure_cross_section import section_at, sections_of
 from lineproof.beams.continuous.figure_cross_section_steel import steel_at, web_circles
-from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, StirrupZone
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, Face, StirrupZone
 from lineproof.beams.continuous.schedule import BarItem, schedule
-from lineproof.drawing import Arc, Circle, Dimension, Figure, Line, Polyline
+from lineproof.drawing import Arc, Arrow, Circle, Dimension, Figure, Line, Polyline
 from lineproof.drawing.paper import lower
 
 from .by_hand import COLUMN, FREE_END, detailing, outline
@@ -225,6 +225,16 @@ def test_ties_within_the_support_are_not_the_stirrups_of_its_face() -> None:
     )
     steel = steel_at(BEAM, Detailing(STRING, zones), 225.0, 20.0)
     assert steel.zone is zones[0]
+
+
+@pytest.mark.parametrize("face", ["bottom", "top"])
+@pytest.mark.parametrize("corner_first", [True, False])
+def test_arrows_of_names_do_not_cross(face: Face, corner_first: bool) -> None:  # noqa: FBT001
+    """Bars in the corners and between them, in either order of the list."""
+    runs = (BarRun(face, 1, 2, "20M", 0.0, 7600.0), BarRun(face, 1, 2, "20M", 1000.0, 5000.0))
+    figure = section_at(BEAM, Detailing(runs if corner_first else runs[::-1], ()), 3000.0)
+    arrows = [LineString([s.start, s.end]) for s in figure.shapes if isinstance(s, Arrow)]
+    assert not any(one.crosses(two) for one, two in combinations(arrows, 2))
 
 
 def test_section_says_what_it_shows() -> None:

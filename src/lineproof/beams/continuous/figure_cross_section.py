@@ -230,7 +230,7 @@ def _callouts(shape: SectionShape, shown: Shown, names: Sequence[Named], way: fl
     flanged = shape.kind == "T" or (shape.kind == "L" and way > 0.0)
     ceiling = shape.h - (shape.h_f + 3.5 * unit if flanged else 1.5 * unit)
     floor = 6.8 * unit if way < 0.0 else 2.0 * unit
-    wanted = [min(max(name.target[1], floor), ceiling) + _rank(shape, name) for name in names]
+    wanted = [min(max(name.target[1], floor), ceiling) + _rank(shape, name, way) for name in names]
     face = 0.0 if way < 0.0 else shape.b_w
     shapes: list[Shape] = []
     gap = min(LINE * unit, (ceiling - floor) / max(len(names) - 1, 1))
@@ -245,10 +245,16 @@ def _callouts(shape: SectionShape, shown: Shown, names: Sequence[Named], way: fl
     return shapes
 
 
-def _rank(shape: SectionShape, name: Named) -> float:
-    """Tell names of one height apart: bars of the flange above, then the higher bars [mm]."""
+def _rank(shape: SectionShape, name: Named, way: float) -> float:
+    """Tell names of one height apart, so that their arrows do not cross [mm].
+
+    Bars of the flange stand above, then the higher bars, then of bars in a row over their names
+    those nearest the names, of bars in a row under them those farthest.
+    """
     x, y = name.target
-    return 1e-3 * (y / shape.h + (1.0 if x > shape.b_w else 0.0))
+    near = way * x / shape.b_w
+    over = near if y > shape.h / 2 else -near
+    return 1e-3 * (y / shape.h + (1.0 if x > shape.b_w else 0.0)) + 1e-6 * over
 
 
 def _dimensions(
