@@ -6,7 +6,9 @@ from typing import Any
 
 import pytest
 
+from lineproof.beams.continuous.summary_tables import _check_row
 from lineproof.record import Record
+from lineproof.sheet import Sheet
 
 from .edge_beam import Edge
 
@@ -55,6 +57,17 @@ def test_moments_of_the_figure_are_those_of_the_table(
             found += ", restraint"
         assert found in said(record, "moments-1")
     assert said(record, "moments-1").count("Mf =") == len(rows)
+
+
+def test_a_row_of_a_demand_below_zero() -> None:
+    """A true minus as everywhere, and a dash where there is no ratio."""
+    sheet = Sheet("B7")
+    with sheet.part("deflection", "Deflection"):
+        sheet.given("D_a", "-0.448 mm")
+        sheet.given("D_m", "4.17 mm")
+        check = sheet.check("D_a <= D_m", unit="mm", title="Deflection")
+    row = _check_row("span 1", check, "mm")
+    assert row.cells == ("span 1", "Deflection", "−0.448 mm", "4.17 mm", "–")
 
 
 def test_deflections_of_the_figure_are_told_from_those_of_the_checks(floor: Record) -> None:

@@ -80,7 +80,7 @@ def _ratio_of(check: Entry, demand: str, resistance: str) -> str:
     shown = ""
     if used is not None:
         shown = printed_ratio(used, "<=", demand, resistance, holds=bool(check))
-    return shown if check else f"{shown} FAILS".strip()
+    return shown or NONE if check else f"{shown} FAILS".strip()
 
 
 def flexure_rows(design: Design) -> Iterator[Row]:
@@ -215,7 +215,7 @@ def _checks(place: str, entries: Mapping[str, Entry]) -> Iterator[Row]:
 
 def _check_row(place: str, check: Entry, unit: str) -> Row:
     sides = printed_sides(check, unit)
-    shown = tuple(f"{side} {unit_word(unit)}".strip() for side in sides)
+    shown = tuple(f"{side} {unit_word(unit)}".strip().replace("-", "−") for side in sides)
     title = (check.extra or {}).get("title") or check.source.title
     return Row((place, title, *shown, _ratio_of(check, *sides)), check)
 
