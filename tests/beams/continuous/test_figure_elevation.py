@@ -287,6 +287,17 @@ def test_hooks_point_into_the_beam() -> None:
     assert "1-10M" in words_of(figure)
 
 
+def test_a_lone_stirrup_has_one_stroke_and_no_length() -> None:
+    """A line without length and a name that ends in a space stood in the drawing."""
+    zone = StirrupZone(2, 8000.0, 8000.0, 1, 0.0, "10M", mark="S01")
+    bar = BarRun("bottom", 1, 3, "20M", 0.0, 5000.0, mark="B01")
+    figure = elevation_figure(BEAM, Detailing((bar,), (zone,)))
+    lines = [s for s in figure.shapes if isinstance(s, Line)]
+
+    assert "S01" in words_of(figure)
+    assert all(line.start != line.end for line in lines)
+
+
 @pytest.mark.parametrize("count", [1, 3])
 def test_ties_within_the_end_supports(count: int) -> None:
     """Ties around hooks stand within the support; their name keeps clear of the others."""

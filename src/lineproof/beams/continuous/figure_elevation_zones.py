@@ -41,8 +41,10 @@ def zone_block(view: View, zones: Sequence[StirrupZone], top: float) -> tuple[li
     y = top + LINE
     shapes: list[Shape] = []
     for zone in shown:
-        ends = view.paper(zone.start), view.paper(zone.end)
-        shapes.append(Line(view.at(ends[0], y), view.at(ends[1], y), "dimensions", THIN))
+        ends = dict.fromkeys((view.paper(zone.start), view.paper(zone.end)))  # one of a lone one
+        if len(ends) > 1:
+            across = [view.at(x, y) for x in ends]
+            shapes.append(Line(across[0], across[1], "dimensions", THIN))
         shapes += [
             Line(view.at(x - TICK, y - TICK), view.at(x + TICK, y + TICK), "dimensions", MEDIUM)
             for x in ends
@@ -68,11 +70,10 @@ def zone_block(view: View, zones: Sequence[StirrupZone], top: float) -> tuple[li
 
 def _names(zone: StirrupZone) -> tuple[Runs, Runs]:
     """Two lines: number, size and spacing; mark and length."""
-    mark: Runs = ((f"{zone.mark} ", "bold"),) if zone.mark else ()
-    length = f"{zone.end - zone.start:.0f}" if zone.number > 1 else ""
-    if zone.around_hooks:
-        length = f"{length} {_TIES}"
-    return ((_count(zone), "roman"),), (*mark, (length, "roman"))
+    words = [f"{zone.end - zone.start:.0f}"] if zone.number > 1 else []
+    words += [_TIES] if zone.around_hooks else []
+    mark: Runs = ((f"{zone.mark}{' ' if words else ''}", "bold"),) if zone.mark else ()
+    return ((_count(zone), "roman"),), (*mark, (" ".join(words), "roman"))
 
 
 def _count(zone: StirrupZone) -> str:
