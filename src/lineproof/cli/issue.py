@@ -5,9 +5,10 @@ from __future__ import annotations
 import argparse
 import os
 import sys
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 from pathlib import Path
+from typing import Any
 
 from lineproof.cli.files import write_all
 from lineproof.cli.progress import Progress
@@ -16,6 +17,7 @@ from lineproof.errors import FaultList, UserError
 from lineproof.notebook.reviews import printed_beside
 from lineproof.package.facts import PAPERS
 from lineproof.package.reviewed import PrintedReview
+from lineproof.quantity import echo
 
 DEFAULT_FOLDER = "issued"
 PACKAGE_NAME = "package"
@@ -75,8 +77,12 @@ def _check_project(reruns: Sequence[Rerun]) -> None:
     seen: dict[str, Path] = {}
     for rerun in reruns:
         record = rerun.calc.record
-        if record.data["project"] != first.calc.record.data["project"]:
-            faults.add(f"{rerun.path}: not of the project of {first.path}; issue it by itself")
+        unlike = _unlike(record.data["project"], first.calc.record.data["project"])
+        if unlike:
+            faults.add(
+                f"{rerun.path}: its project differs from that of {first.path} in {unlike}; give "
+                "both the same project.toml, or issue it by itself"
+            )
         if record.calc_id in seen:
             faults.add(
                 f"{rerun.path}: its calc id {record.calc_id!r} is that of {seen[record.calc_id]}; "
@@ -84,6 +90,24 @@ def _check_project(reruns: Sequence[Rerun]) -> None:
             )
         seen[record.calc_id] = rerun.path
     faults.raise_if_any()
+
+
+def _unlike(own: Mapping[str, Any], other: Mapping[str, Any]) -> str:
+    """Name the first fact in which two projects differ, with both values; empty where none does.
+
+    >>> _unlike({"codes": {"pair": "NBC 2020"}}, {"codes": {"pair": "NBC 2015"}})
+    "[codes] pair: 'NBC 2020' here, 'NBC 2015' there"
+    """
+    for section in sorted({*own, *other}):
+        mine, theirs = own.get(section), other.get(section)
+        if mine == theirs:
+            continue
+        if not isinstance(mine, dict) or not isinstance(theirs, dict):
+            return f"[{section}]"
+        fact = next(n for n in sorted({*mine, *theirs}) if mine.get(n) != theirs.get(n))
+        here, there = (echo(facts.get(fact, "")) for facts in (mine, theirs))
+        return f"[{section}] {fact}: {here} here, {there} there"
+    return ""
 
 
 def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Path, bytes]:
