@@ -43,6 +43,11 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "superimposed": "1.5 kPa", "use": "office", "exposure": "C-1", "cover": "60 mm",
         "fire_rating": "1 h",
     },
+    "torsion at columns that the beam turns freely on": {  # with the restraint, no cap by 11.3.9.4
+        "spans": ["6 m", "5 m"], "supports": ["column 400 mm"] * 3, "shape": "L",
+        "tributary_width": "1.7 m", "closed_stirrups": True,
+        "torques": {"D": "6 kN.m", "L": "4 kN.m"}, "slab_bars": "2 x 10M at 300 mm",
+    },
     "slender columns at the ends": {  # little moment, which falls off within 0.2 m of the face
         "spans": ["6 m", "8 m"], "supports": ["column 350 mm"] * 3,
         "columns": {1: ["350 mm x 350 mm x 3.2 m"] * 2, 3: ["350 mm x 350 mm x 3.2 m"]},
