@@ -181,8 +181,9 @@ IN_PART = _criterion(
     clause="12.5.3",
     title="Hooks developed in part",
     basis=FROM_MEMORY,
-    yes="The bars count with the part l_av/l_dh of their area, at the face of the support and "
-    "wherever else they are used: more steel than required lets the hook be shorter.",
+    yes="Of the area of the bars as much counts as the first length is of the second, at the face "
+    "of the support and wherever else they are used: more steel than required lets the hook be "
+    "shorter.",
     no="The hook is developed in full.",
     key="hook-in-part",
 )
