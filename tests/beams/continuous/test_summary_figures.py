@@ -2,14 +2,19 @@
 
 from __future__ import annotations
 
+from types import SimpleNamespace
 from typing import Any
 
 import pytest
 
+from lineproof.beams.continuous.layout import Detailing, StirrupZone
+from lineproof.beams.continuous.summary_supports import _hangers
 from lineproof.beams.continuous.summary_tables import _check_row
 from lineproof.record import Record
 from lineproof.sheet import Sheet
+from lineproof.standards.a23_3 import shear_bars
 
+from .by_hand import outline
 from .edge_beam import Edge
 
 
@@ -57,6 +62,27 @@ def test_moments_of_the_figure_are_those_of_the_table(
             found += ", restraint"
         assert found in said(record, "moments-1")
     assert said(record, "moments-1").count("Mf =") == len(rows)
+
+
+@pytest.mark.parametrize(
+    ("number", "ties"), [(1, " and the ties around its hooks"), (2, ""), (3, "")]
+)
+def test_ties_around_hooks_are_named_where_they_stand(number: int, ties: str) -> None:
+    """At an end support that has them; none at a girder in the middle, nor at straight bars."""
+    zones = (
+        StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M", around_hooks=True),
+        StirrupZone(2, 7700.0, 16000.0, 29, 300.0, "10M"),
+    )
+    hangers = {"n_h": SimpleNamespace(value=3), shear_bars.HANGERS_PROVIDED.key: None}
+    model = SimpleNamespace(
+        sheet=SimpleNamespace(entries_of=lambda _: hangers),
+        inputs=SimpleNamespace(stirrup="10M", stirrup_legs=2),
+    )
+    design: Any = SimpleNamespace(
+        model=model, outline=outline((7600.0, 9200.0)), detailing=Detailing((), zones)
+    )
+    ((_, text),) = (row.cells for row in _hangers(design, number))
+    assert text == f"3 hanger stirrups 10M with 2 legs, besides the stirrups of the beam{ties}"
 
 
 def test_a_row_of_a_demand_below_zero() -> None:

@@ -56,11 +56,22 @@ def turning_table(model: Model) -> tuple[list[str], list[Row]]:
 def _hangers(design: Design, number: int) -> Iterator[Row]:
     made, inputs = design.model.sheet.entries_of(f"support-{number}"), design.model.inputs
     if shear_bars.HANGERS_PROVIDED.key in made:
+        ties = " and the ties around its hooks" if _tied(design, number) else ""
         text = (
             f"{made['n_h'].value:g} hanger stirrups {inputs.stirrup} with {inputs.stirrup_legs} "
-            "legs, besides the stirrups of the beam and the ties around its hooks"
+            f"legs, besides the stirrups of the beam{ties}"
         )
         yield Row((str(number), text), made[shear_bars.HANGERS_PROVIDED.key])
+
+
+def _tied(design: Design, number: int) -> bool:
+    """Tell whether ties stand around hooks within a support."""
+    axes = design.outline.axes
+    middles = (
+        (zone.start + zone.end) / 2 for zone in design.detailing.stirrups if zone.around_hooks
+    )
+    nearest = {min(axes, key=lambda axis: abs(axis - middle)) for middle in middles}
+    return axes[number - 1] in nearest
 
 
 def _hooks(design: Design, number: int) -> Iterator[Row]:
