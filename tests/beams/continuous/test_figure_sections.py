@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
-from itertools import combinations, product
+from itertools import combinations, pairwise, product
 from typing import Any
 
 import pytest
@@ -225,6 +225,25 @@ def test_ties_within_the_support_are_not_the_stirrups_of_its_face() -> None:
     )
     steel = steel_at(BEAM, Detailing(STRING, zones), 225.0, 20.0)
     assert steel.zone is zones[0]
+
+
+def test_bars_of_two_runs_in_the_overhangs_stand_beside_each_other() -> None:
+    """Two of each run, one at each side: four circles apart, named in one line.
+
+    Of two runs that are lapped the bars touch: (16 + 16)/2 = 16 mm from centre to centre.
+    """
+    first = BarRun("top", 1, 2, "15M", 0.0, 5000.0, "overhang", mark="T01")
+    more = BarRun("top", 1, 2, "15M", 1000.0, 9000.0, "overhang", mark="T02")
+    figure = section_at(BEAM, Detailing((first, more), ()), 3000.0)
+    places = sorted(circle.centre[0] for circle in circles_of(figure))
+    assert len(places) == 4
+    assert min(b - a for a, b in pairwise(places)) > 100.0
+    assert "T01 2-15M, T02 2-15M in flange" in words_of(figure)
+
+    on = replace(more, start=4200.0, end=9000.0)
+    lapped = section_at(BEAM, Detailing((first, on), ()), 4600.0)
+    places = sorted(circle.centre[0] for circle in circles_of(lapped))
+    assert (places[1] - places[0], places[3] - places[2]) == pytest.approx((16.0, 16.0))
 
 
 @pytest.mark.parametrize("face", ["bottom", "top"])

@@ -164,9 +164,16 @@ def _shape(outline_: BeamOutline, span: int) -> SectionShape:
 
 
 def _label(run: BarRun) -> Runs:
-    where = {"overhang": " in flange", "side face": " side faces"}.get(run.place, "")
-    text = f"{run.number}-{run.size}{where}"
+    text = f"{run.number}-{run.size}{' side faces' if run.place == 'side face' else ''}"
     return ((f"{run.mark} ", "bold"), (text, "roman")) if run.mark else words(text)
+
+
+def _flange_label(flange: Placed) -> Runs:
+    """Name all runs in the overhangs in one line: an arrow to a second would cross the first."""
+    made: Runs = ()
+    for run in dict.fromkeys(run for run, _ in flange):
+        made = (*made, *(words(", ") if made else ()), *_label(run))
+    return (*made, *words(" in flange"))
 
 
 Placed = Sequence[tuple[BarRun, Circle]]
@@ -188,9 +195,11 @@ def _names(
             continue
         if run.face == "bottom" or run.place == "side face":
             left.append(Named(_label(run), min(mine)))
-        else:
-            target = corner(mine) if run.place == "web" else _near(mine, steel.outline.b_w)
-            (left if all_left else right).append(Named(_label(run), target))
+        elif run.place == "web":
+            (left if all_left else right).append(Named(_label(run), corner(mine)))
+    if flange:
+        points = [circle.centre for _, circle in flange]
+        right.append(Named(_flange_label(flange), _near(points, steel.outline.b_w)))
     inset, faces = (
         steel.cover + steel.stirrup,
         {run.face for run in steel.runs if run.place != "side face"},

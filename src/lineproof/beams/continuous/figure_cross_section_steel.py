@@ -193,24 +193,48 @@ def _across(steel: Steel, places: Sequence[Place], outer: Sequence[float]) -> li
 
 
 def overhang_circles(steel: Steel, shape: SectionShape, shown: Shown) -> Placed:
-    """Spread the bars in the overhangs evenly over what is drawn of them, half at each side."""
+    """Spread the bars in the overhangs evenly over what is drawn of them, half at each side.
+
+    Bars of all runs stand beside each other, lapped ones in contact.
+    """
     sides = [
         (face, way, reach)
         for face, way, reach in ((0.0, -1.0, shown.left), (shape.b_w, 1.0, shown.right))
         if reach > 0.0
     ]
+    runs = [run for run in steel.runs if run.place == "overhang"]
+    first, mates = _lapped(steel, runs)
     placed: Placed = []
-    for run in steel.runs:
-        if run.place != "overhang" or not sides:
-            continue
-        inset = steel.cover + steel.stirrup + run.diameter / 2
-        y = shape.h - inset if run.face == "top" else shape.h - shape.h_f + inset
-        for index, (face, way, reach) in enumerate(sides):
-            share = run.number // len(sides) + (index < run.number % len(sides))
-            for number in range(share):
-                x = face + way * (number + 0.5) * reach / share
-                placed.append((run, Circle((x, y), run.diameter / 2, "bars")))
+    for index, (face, way, reach) in enumerate(sides):
+        bars = [run for run in first for _ in range(_share(run, index, len(sides)))]
+        left = {run: _share(run, index, len(sides)) for run in mates.values()}
+        for number, run in enumerate(bars):
+            x = face + way * (number + 0.5) * reach / len(bars)
+            placed.append((run, _beside_web(steel, shape, run, x)))
+            mate = mates.get(run)
+            if mate is not None and left[mate]:
+                left[mate] -= 1
+                apart = way * (run.diameter + mate.diameter) / 2
+                placed.append((mate, _beside_web(steel, shape, mate, x + apart)))
     return placed
+
+
+def _share(run: BarRun, index: int, sides: int) -> int:
+    """Return how many bars of a run stand in one of the overhangs."""
+    return run.number // sides + (index < run.number % sides)
+
+
+def _lapped(steel: Steel, runs: Sequence[BarRun]) -> tuple[list[BarRun], dict[BarRun, BarRun]]:
+    """Return the runs that have a place of their own, and to each the one lapped with it."""
+    laps = ((steel.bars[i], steel.bars[j]) for i, j in steel.strings.laps)
+    mates = {one: two for one, two in laps if one in runs and two in runs}
+    return [run for run in runs if run not in mates.values()], mates
+
+
+def _beside_web(steel: Steel, shape: SectionShape, run: BarRun, x: float) -> Circle:
+    inset = steel.cover + steel.stirrup + run.diameter / 2
+    y = shape.h - inset if run.face == "top" else shape.h - shape.h_f + inset
+    return Circle((x, y), run.diameter / 2, "bars")
 
 
 def side_circles(steel: Steel) -> Placed:
