@@ -64,6 +64,13 @@ def test_moments_of_the_figure_are_those_of_the_table(
     assert said(record, "moments-1").count("Mf =") == len(rows)
 
 
+def test_the_take_down_tells_type_and_span_of_loads_that_are_typed_in(edge: Record) -> None:
+    shown = {row["Load"]: row["Value"] for row in table(edge, "take-down")}
+    assert shown["Brick parapet on the edge: dead load"] == "9.50 kN/m"
+    assert shown["Hoist frame, live: live load on span 2"] == "18.0 kN"
+    assert shown["Dead load on span 1"]
+
+
 @pytest.mark.parametrize(
     ("number", "ties"), [(1, " and the ties around its hooks"), (2, ""), (3, "")]
 )

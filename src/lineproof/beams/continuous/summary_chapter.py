@@ -57,7 +57,7 @@ from lineproof.beams.continuous.summary_torsion import (
 from lineproof.beams.continuous.symbols import KINDS
 from lineproof.drawing import Figure, to_json
 from lineproof.record import Entry
-from lineproof.record.entry import VALUES
+from lineproof.record.entry import GIVEN, VALUES
 from lineproof.sheet import Sheet
 
 SUMMARY = "summary"
@@ -157,8 +157,10 @@ def _record_loads(model: Model) -> None:
 
 
 def _title(entry: Entry) -> str:
+    """Return the title of a load; of one that is typed in also its type and span."""
     title = str((entry.extra or {}).get("title") or entry.source.title)
-    return title[0].upper() + title[1:]
+    where = f": {entry.source.origin}" if entry.kind == GIVEN else ""
+    return f"{title[0].upper()}{title[1:]}{where}"
 
 
 def _figure(sheet: Sheet, key: str, figure: Figure, front: int, rests: Iterable[Entry]) -> None:
