@@ -40,6 +40,17 @@ def test_beams_on_masonry_walls_are_designed(inputs: dict[str, Any]) -> None:
     assert recompute(record) == []
 
 
+def test_straight_top_bars_at_a_narrow_end_say_why_they_have_no_hook() -> None:
+    """25M at a girder 250 mm wide: 8 x 25.2 = 201.6 mm are more than 250 - 50 = 200 mm."""
+    given = ["2-25M", "2-25M"]
+    beam = flow.start(spans=["7 m"], supports=["girder 250 mm"] * 2, top_bars=given)
+    record = flow.run(flow.without_cures(beam)).close()
+
+    fits = record.entries["anchorage-end-1-top-1/hook-least-length"]
+    assert fits["kind"] == "decision"
+    assert fits["holds"] is False
+
+
 def bare_of(**inputs: Any) -> Designed:
     """Return a beam as it is while its bars are chosen: none stand yet."""
     design = flow.analysed(**inputs).design

@@ -7,7 +7,7 @@ from collections.abc import Iterable, Mapping
 import numpy as np
 
 from lineproof.beams.bars import BarLayers, bars_text
-from lineproof.beams.continuous.anchorage import ties_at
+from lineproof.beams.continuous.anchorage import has_hooks, ties_at
 from lineproof.beams.continuous.anchorage_record import Writers, place_of, plain, record_hook
 from lineproof.beams.continuous.cutoff import (
     distance,
@@ -320,5 +320,7 @@ def record_end_top(site: Site) -> None:
             steps.line(hooks.AVAILABLE)
             if steps.holds(development.DEVELOPED):
                 steps.check(development.DEVELOPED)
-            else:
-                steps.decide(development.IN_PART)
+                continue
+            steps.decide(development.IN_PART)
+            if has_hooks(writers.designed) and not steps.holds(hooks.LEAST_FITS):
+                steps.decide(hooks.LEAST_FITS)  # why they are straight
