@@ -236,6 +236,18 @@ def test_bars_too_short_are_told_by_how_much() -> None:
         assert bool(check(again, f"{part}/cut-extension")) is holds
 
 
+def test_a_support_too_short_for_its_bars_is_told_to_be_longer() -> None:
+    """A wall 150 mm wide, bars that end 50 mm before its far face: 100 mm where 150 are asked."""
+    part = "anchorage-bottom-1-left"
+    one: Mapping[str, Any] = {"spans": ["5 m"], "h": "450 mm"}
+    text = note(sheet_of(THROUGH, supports=["wall 150 mm"] * 2, **one), part)
+    more = told(text, r"made (\d+) mm longer into the support, which must be as much longer")
+
+    for longer, holds in ((more, True), (more - 10, False)):
+        wider = checked(THROUGH, supports=[f"wall {150 + longer:g} mm"] * 2, **one)
+        assert bool(check(wider, f"{part}/length-in-support")) is holds
+
+
 def test_the_existing_beam_holds_what_it_was_built_for_and_not_what_is_asked() -> None:
     """The notebook says so: with 4.8 kPa every check holds; with 7.2 the top steel does not."""
     built, asked = existing(live_load="4.8 kPa"), existing()

@@ -57,7 +57,8 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
 LONGER: Mapping[Criterion, str] = {
     cutoff.EXTENDED: "the bars that end here made {:g} mm longer",
     cutoff.CONTINUES: "the bars that go on made {:g} mm longer",
-    cutoff.LENGTH_IN_SUPPORT: "the bottom bars made {:g} mm longer into the support",
+    cutoff.LENGTH_IN_SUPPORT: "the bottom bars made {:g} mm longer into the support, which must "
+    "be as much longer where they end at its far cover",
     cutoff.LONG_PAST_INFLECTION: "the top bars made {:g} mm longer",
     laps.LONG_ENOUGH: "a lap {:g} mm longer",
 }
