@@ -45,7 +45,7 @@ NOT_SOUGHT = (
 )
 NONE_CROSS = "Bars are needed where none count; how many, the check of the moment there says."
 CHOSEN_ANEW = (
-    "It was found with the bars and the weight as they are here: bars left open are chosen anew "
+    "Found with the bars and the weight as they are here: bars left open are chosen anew "
     "when a value is typed in, and a larger beam weighs more. Give these bars with it, and look at "
     "the check again."
 )
