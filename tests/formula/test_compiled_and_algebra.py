@@ -147,7 +147,8 @@ def test_compiled_and_woven_functions_give_the_same_bits(
 ) -> None:
     node_by_node = _outcome(lambda *at: _worked(tree, dict(zip(NAMES, at, strict=True))), a, b, c)
     assert _outcome(compile_tree(tree, NAMES), a, b, c) == node_by_node
-    assert _outcome(weave_tree(tree, NAMES), a, b, c) == node_by_node
+    woven = weave_tree(tree)
+    assert _outcome(lambda *at: woven(dict(zip(NAMES, at, strict=True))), a, b, c) == node_by_node
 
 
 @pytest.mark.parametrize("name", ["__import__('os').getcwd()", "a b", "_0", "lambda: 0", "'"])
@@ -155,12 +156,12 @@ def test_no_text_of_a_tree_is_run(name: str) -> None:
     scope = {name: SimpleNamespace(value=3.0)}
     tree = Binary("*", Name(name), Number("-2"))
     assert compile_tree(tree, [name])(3.0) == -6.0
-    assert weave_tree(tree, [name])(3.0) == -6.0
+    assert weave_tree(tree)({name: 3.0}) == -6.0
     assert compile_step(tree, [name])(scope)[1] == -6.0
     with pytest.raises(NameError):
         compile_tree(tree, ["b"])(3.0)
     with pytest.raises(KeyError):
-        weave_tree(tree, ["b"])
+        weave_tree(tree)({"b": 3.0})
     with pytest.raises((NameError, KeyError)):
         compile_tree(Call(name, (Number("1"),)), [name])(3.0)
 

@@ -9,7 +9,7 @@ from functools import cached_property
 from typing import Any
 
 from lineproof.errors import UserError
-from lineproof.formula import Tree, names_of, parse_criterion, parse_line
+from lineproof.formula import Tree, parse_criterion, parse_line
 from lineproof.formula.compiled import COMPARE, weave_tree
 from lineproof.quantity.digits import rounded_text
 from lineproof.quantity.units import internal_factor
@@ -130,8 +130,7 @@ def evaluated(tree: Tree, named: Mapping[str, Number]) -> Number:
     >>> evaluated(parse_line("a = 2*b")[1], {"b": 3.0})
     6.0
     """
-    names = names_of(tree)
-    result = weave_tree(tree, names)(*[named[name] for name in names])
+    result = weave_tree(tree)(named)
     if not isinstance(result, float) or not math.isfinite(result):
         msg = "no finite real number"
         raise ValueError(msg)

@@ -170,40 +170,37 @@ def _step(tree: Tree, names: tuple[str, ...]) -> Callable[[dict[str, Any]], Any]
     return made
 
 
-Woven = Callable[[Sequence[float]], Any]
-"""A tree, or a piece of one, as a function of the values of all names."""
-
-
-def weave_tree(tree: Tree, names: Sequence[str]) -> Callable[..., float]:
-    """Return the function of :func:`compile_tree`, for what is worked out a few times only.
-
-    >>> weave_tree(Binary("/", Name("a"), Number("2")), ["a"])(5.0)
-    2.5
-    """
-    return _wove(tree, tuple(names))
+Woven = Callable[[Mapping[str, float]], Any]
+"""A tree, or a piece of one, as a function of values by name."""
 
 
 @lru_cache(maxsize=MOST_KEPT)
-def _wove(tree: Tree, names: tuple[str, ...]) -> Callable[..., float]:
-    whole = _weave(tree, {name: place for place, name in enumerate(names)})
-    return lambda *values: whole(values)
+def weave_tree(tree: Tree) -> Woven:
+    """Return the tree as a function of values by name, for what is worked out a few times only.
+
+    Raises :class:`KeyError` for a name without a value, as it is called.
+
+    >>> weave_tree(Binary("/", Name("a"), Number("2")))({"a": 5.0})
+    2.5
+    """
+    return _weave(tree)
 
 
-def _weave(tree: Tree, places: Mapping[str, int]) -> Woven:
+def _weave(tree: Tree) -> Woven:
     match tree:
         case Number(text):
             number = float(text)
             return lambda _: number
         case Name(symbol):
-            return operator.itemgetter(places[symbol])
+            return operator.itemgetter(symbol)
         case Negative(of):
-            inner = _weave(of, places)
+            inner = _weave(of)
             return lambda values: -inner(values)
         case Binary(op, left, right):
-            return _WEAVERS[op](_weave(left, places), _weave(right, places))
+            return _WEAVERS[op](_weave(left), _weave(right))
         case Call(function, args):
             called = _FUNCTIONS[function]
-            woven = [_weave(a, places) for a in args]
+            woven = [_weave(a) for a in args]
             return lambda values: called(*[one(values) for one in woven])
 
 

@@ -24,14 +24,6 @@ def digest_of(*pieces: str) -> str:
     return hashlib.sha256(text).hexdigest()[:DIGEST_LENGTH]
 
 
-def rested_on(arguments: Iterable[tuple[str, str]]) -> list[str]:
-    """Return the pieces of a digest that arguments give, by name: (name, digest) pairs.
-
-    Sorted, since a record that was saved by Jupyter comes back with its keys sorted.
-    """
-    return sorted([f"{name}={digest}" for name, digest in arguments])
-
-
 class Part:
     """A titled part of a calculation and the entries made in it, by symbol, in order."""
 
@@ -97,8 +89,9 @@ class Entry:
             else:
                 pieces = entry._pieces()  # noqa: SLF001 - another entry
                 names = entry._argument_names()  # noqa: SLF001 - another entry
-                on = zip(names, (arg.digest_ for arg in entry.args), strict=True)
-                entry.digest_ = digest_of(*pieces, *rested_on(on))
+                on = [f"{n}={a.digest_}" for n, a in zip(names, entry.args, strict=True)]
+                # Sorted: a record that was saved by Jupyter comes back with its keys sorted.
+                entry.digest_ = digest_of(*pieces, *sorted(on))
                 waiting.pop()
         return self.digest_
 

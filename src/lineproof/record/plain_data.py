@@ -6,6 +6,7 @@ import json
 import math
 import re
 from collections.abc import Iterable, Mapping
+from functools import lru_cache
 from operator import itemgetter
 from typing import Any, NoReturn
 
@@ -13,6 +14,8 @@ from lineproof.errors import UserError
 
 DEEPEST = 60
 LARGEST_INTEGER = 2**53
+_MOST_KEPT = 8192
+"""Printed numbers that are kept as looked at: the same ones stand in many lines."""
 _NUMBER_TEXT = re.compile(r"-?(?:0|[1-9][0-9]{0,29})(?:\.[0-9]{1,40})?(?:e-?[0-9]{1,3})?\Z")
 
 
@@ -118,15 +121,20 @@ def is_number_text(value: object) -> bool:
     >>> is_number_text("-12.5"), is_number_text("5.00e9"), is_number_text("1 000")
     (True, True, False)
     """
-    return isinstance(value, str) and _NUMBER_TEXT.match(value) is not None
+    return isinstance(value, str) and _reads_as_number(value)
 
 
 def are_number_texts(values: Iterable[object]) -> bool:
     """Tell whether all values are printed numbers."""
     try:
-        return all(map(_NUMBER_TEXT.match, values))  # type: ignore[arg-type]
+        return all(map(_reads_as_number, values))
     except TypeError:
         return False
+
+
+@lru_cache(maxsize=_MOST_KEPT)
+def _reads_as_number(text: str) -> bool:
+    return _NUMBER_TEXT.match(text) is not None
 
 
 def need(row: Mapping[str, Any], what: str, /, **kinds: type) -> None:

@@ -41,9 +41,10 @@ def is_surely_plain(text: str) -> bool:
     >>> is_surely_plain('{"a": ["[[", "\\""]}'), is_surely_plain("[" * 62 + "]" * 62)
     (True, False)
     """
-    if "\\u" in text:
-        return False
-    if "\\" in text:  # a quote after an even number of backslashes ends a string
+    if "\\" in text:
+        if "\\u" in text:
+            return False
+        # A quote after an even number of backslashes ends a string.
         text = text.replace("\\\\", "").replace('\\"', "")
     try:
         marks = text.encode().translate(_TO_SQUARE, _NO_MARKS)

@@ -3,18 +3,19 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
 from lineproof.errors import UserError
-from lineproof.formula import names_of, parse_criterion, parse_line
-from lineproof.formula.compiled import COMPARE, weave_tree
-from lineproof.formula.tree import Tree
+from lineproof.formula import parse_criterion, parse_line
+from lineproof.formula.compiled import COMPARE, MOST_KEPT, Woven, weave_tree
 from lineproof.quantity import read_quantity
 from lineproof.quantity.units import internal_factor
 from lineproof.record import printed_checks
-from lineproof.record.entry import CHECK, CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES
+from lineproof.record.entry import CHECK, DECISION, FOUND, GIVEN, LINE, LOOKUP, VALUES
+from lineproof.record.printed_checks import Finding
 from lineproof.record.printing import ratio
 from lineproof.record.procedures import recall, run
 from lineproof.record.record import Record
@@ -24,6 +25,7 @@ SAME = 1e-9
 """Relative difference up to which two computed floats count as the same."""
 REMAINDER = 1e-11
 """Part of the larger side of a comparison up to which the smaller is the rounding of a sum."""
+Data = Mapping[str, Any]
 
 
 @dataclass(frozen=True, slots=True)
@@ -42,6 +44,8 @@ class Difference:
 
 def close(first: float, second: float, rounding: float = 0.0) -> bool:
     """Tell whether two floats are the same but for the last bits, or differ by no more rounding."""
+    if first == second:
+        return True
     return abs(first - second) <= max(SAME * max(abs(first), abs(second), 1e-12), rounding)
 
 
@@ -55,122 +59,142 @@ def recompute(record: Record) -> list[Difference]:
 
 
 def _all_differences(record: Record) -> list[Difference]:
-    values: dict[str, float] = {}
-    units = {i: entry["unit"] for i, entry in record.entries.items() if "unit" in entry}
-    differences: list[Difference] = []
+    entries, so_far = record.entries, _SoFar()
+    for entry in entries.values():
+        compare = _OF_KIND.get(entry["kind"])
+        if compare is not None:
+            so_far.take(entry, compare)
     # Values found together close one another: closings are compared when all values are known.
-    closings = [e for e in record.entries.values() if e["kind"] == FOUND]
-    steps = [(e, _differences) for e in record.entries.values()] + [(e, _closing) for e in closings]
-    for entry, compare in steps:
+    for found in so_far.closings:
+        so_far.take(found, _closing)
+    hashed = [Difference(i, *one) for i, one in printed_checks.hashed(entries)]
+    whole = [Difference("record", *one) for one in printed_checks.whole(record.data, entries)]
+    return [*so_far.differences, *hashed, *whole]
+
+
+class _SoFar:
+    """The values recomputed so far [internal unit] by id, what is left to close, what differs."""
+
+    def __init__(self) -> None:
+        self.values: dict[str, float] = {}
+        self.units: dict[str, str] = {}
+        self.closings: list[Data] = []
+        self.differences: list[Difference] = []
+
+    def take(self, entry: Data, compare: Comparing) -> None:
+        """Compare an entry; one that cannot be worked out stands for what follows as stored."""
         try:
-            differences.extend(compare(entry, values, units))
+            found = compare(entry, self)
         except (ArithmeticError, ValueError, TypeError, KeyError) as error:
             stored = str(entry.get("value", entry.get("holds", "")))
-            differences.append(Difference(entry["id"], "value", stored, f"failed: {error}"))
-            if entry["kind"] in VALUES:
-                values.setdefault(entry["id"], _stored(entry["value"], entry["unit"]))
-    again = printed_checks.digests(record.entries)
-    differences += [
-        Difference(i, "digest", entry["digest"], again[i])
-        for i, entry in record.entries.items()
-        if entry["digest"] != again[i]
-    ]
-    differences += [
-        Difference("record", *found) for found in printed_checks.whole(record.data, record.entries)
-    ]
-    return differences
+            found = [("value", stored, f"failed: {error}")]
+            if entry["kind"] in VALUES and entry["id"] not in self.values:
+                self._keep(entry, entry["value"] * internal_factor(entry["unit"]))
+        if found:
+            self.differences += [Difference(entry["id"], *one) for one in found]
+
+    def named(self, args: Mapping[str, str]) -> dict[str, float]:
+        """Return the values that an entry rests on, by their names in its formula."""
+        values = self.values
+        return {name: values[target] for name, target in args.items()}
+
+    def compared(self, entry: Data, value: float) -> list[Finding]:
+        """Keep a recomputed value; compare the stored and the printed one with it."""
+        self._keep(entry, value)
+        found = printed_checks.printed_value(entry["printed"], value)
+        stored, scale = entry["value"], internal_factor(entry["unit"])
+        if not close(value, stored * scale):
+            found.insert(0, ("value", f"{stored:.10g}", f"{value / scale:.10g}"))
+        return found
+
+    def _keep(self, entry: Data, value: float) -> None:
+        self.values[entry["id"]] = value
+        self.units[entry["id"]] = entry["unit"]
 
 
-def _differences(
-    entry: Mapping[str, Any], values: dict[str, float], units: Mapping[str, str]
-) -> Iterator[Difference]:
-    kind, entry_id = entry["kind"], entry["id"]
-    if kind in CRITERIA:
-        yield from _criterion(entry_id, entry, values, units)
-    elif kind in VALUES:
-        value = _value(entry, values)
-        values[entry_id] = value
-        if not close(value, _stored(entry["value"], entry["unit"])):
-            again = value / internal_factor(entry["unit"])
-            yield Difference(entry_id, "value", f"{entry['value']:.10g}", f"{again:.10g}")
-        for found in _printed(entry, value, values, units):
-            yield Difference(entry_id, *found)
+Comparing = Callable[[Data, _SoFar], list[Finding]]
 
 
-def _closing(
-    entry: Mapping[str, Any], values: dict[str, float], units: Mapping[str, str]
-) -> Iterator[Difference]:
-    yield from _criterion(entry["id"], entry["closing"], values, units)
+def _given(entry: Data, so_far: _SoFar) -> list[Finding]:
+    typed = read_quantity(entry["symbol"], entry["typed"], entry["unit"])
+    return so_far.compared(entry, typed.value) + printed_checks.printed_typed(entry, typed)
 
 
-def _printed(
-    entry: Mapping[str, Any], value: float, values: Mapping[str, float], units: Mapping[str, str]
-) -> Iterator[printed_checks.Finding]:
-    yield from printed_checks.printed_value(entry["printed"], value)
-    if entry["kind"] == GIVEN:
-        yield from printed_checks.printed_typed(entry)
-    if entry["kind"] in (LINE, FOUND):
-        yield from printed_checks.printed_arguments(entry, values, units)
+def _lookup(entry: Data, so_far: _SoFar) -> list[Finding]:
+    # Read as the sheet read it: the last bit of 7.2 kPa would else grow where values balance.
+    printed = entry["printed"]
+    text = f"{printed['result']} {printed['unit']}"
+    return so_far.compared(entry, read_quantity(entry["symbol"], text, printed["unit"]).value)
 
 
-def _stored(value: float, unit: str) -> float:
-    """Return a stored value in the internal unit."""
-    return value * internal_factor(unit)
+def _line(entry: Data, so_far: _SoFar) -> list[Finding]:
+    named = so_far.named(entry["args"])
+    found = so_far.compared(entry, _evaluate(_woven(entry["formula"]), named))
+    return found + printed_checks.printed_arguments(entry, named, so_far.units)
 
 
-def _value(entry: Mapping[str, Any], values: Mapping[str, float]) -> float:
-    kind = entry["kind"]
-    if kind == GIVEN:
-        return read_quantity(entry["symbol"], entry["typed"], entry["unit"]).value
-    if kind == LOOKUP:
-        # Read as the sheet read it: the last bit of 7.2 kPa would else grow where values balance.
-        printed = entry["printed"]
-        text = f"{printed['result']} {printed['unit']}"
-        return read_quantity(entry["symbol"], text, printed["unit"]).value
-    if kind == LINE:
-        _, tree = parse_line(entry["formula"])
-        return _evaluate(tree, entry["args"], values)
+def _found(entry: Data, so_far: _SoFar) -> list[Finding]:
+    so_far.closings.append(entry)
     made = recall(entry["procedure"]["name"], entry["procedure"]["version"])
     if made is None:
         raise UserError(f"procedure {entry['procedure']['name']!r} is not known here")
-    named = {name: values[target] for name, target in entry["args"].items()}
+    named = so_far.named(entry["args"])
     if not made.takes(named):
         raise UserError(f"procedure {made.name!r} takes {', '.join(made.names)}")
     value = run(made, named, entry["settings"])
     if not math.isfinite(value):
         raise UserError(f"procedure {made.name!r} finds no finite number")
-    return value
+    found = so_far.compared(entry, value)
+    return found + printed_checks.printed_arguments(entry, named, so_far.units)
 
 
-def _evaluate(tree: Tree, args: Mapping[str, str], values: Mapping[str, float]) -> float:
-    names = names_of(tree)
-    result = weave_tree(tree, names)(*[values[args[name]] for name in names])
-    if not isinstance(result, float) or not math.isfinite(result):
-        raise UserError("the result is not a real number")
-    return result
+def _closing(entry: Data, so_far: _SoFar) -> list[Finding]:
+    return _criterion(entry["closing"], so_far)
 
 
-def _criterion(
-    entry_id: str, test: Mapping[str, Any], values: Mapping[str, float], units: Mapping[str, str]
-) -> Iterator[Difference]:
-    left_tree, sign, right_tree = parse_criterion(test["formula"])
-    left = _evaluate(left_tree, test["args"], values)
-    right = _evaluate(right_tree, test["args"], values)
+def _criterion(test: Data, so_far: _SoFar) -> list[Finding]:
+    left_side, sign, right_side = _woven_sides(test["formula"])
+    named = so_far.named(test["args"])
+    left, right = _evaluate(left_side, named), _evaluate(right_side, named)
     scale = internal_factor(test["unit"])
     # What is left of a sum in equilibrium is rounding: it counts against what it is compared with.
     rounding = REMAINDER * max(abs(left), abs(right))
-    for what, stored, value in (("left", test["left"], left), ("right", test["right"], right)):
-        if not close(_stored(stored, test["unit"]), value, rounding):
-            yield Difference(entry_id, f"{what} side", f"{stored:.10g}", f"{value / scale:.10g}")
+    found = [
+        (f"{what} side", f"{test[what]:.10g}", f"{value / scale:.10g}")
+        for what, value in (("left", left), ("right", right))
+        if not close(test[what] * scale, value, rounding)
+    ]
     if _truth(sign, left, right) not in (None, test["holds"]):
-        yield Difference(entry_id, "truth", str(test["holds"]), str(not test["holds"]))
-    for found in printed_checks.printed_comparison(test, (left, right)):
-        yield Difference(entry_id, *found)
-    for found in printed_checks.printed_arguments(test, values, units):
-        yield Difference(entry_id, *found)
+        found.append(("truth", str(test["holds"]), str(not test["holds"])))
+    found += printed_checks.printed_comparison(test, (left, right))
+    found += printed_checks.printed_arguments(test, named, so_far.units)
     if test.get("kind") == CHECK:
-        for found in printed_checks.printed_utilisation(test, ratio(sign, left, right)):
-            yield Difference(entry_id, *found)
+        found += printed_checks.printed_utilisation(test, ratio(sign, left, right))
+    return found
+
+
+_OF_KIND: Mapping[str, Comparing] = {
+    GIVEN: _given, LOOKUP: _lookup, LINE: _line, FOUND: _found,
+    DECISION: _criterion, CHECK: _criterion,
+}  # fmt: skip
+
+
+@lru_cache(maxsize=MOST_KEPT)
+def _woven(formula: str) -> Woven:
+    return weave_tree(parse_line(formula)[1])
+
+
+@lru_cache(maxsize=MOST_KEPT)
+def _woven_sides(comparison: str) -> tuple[Woven, str, Woven]:
+    left, sign, right = parse_criterion(comparison)
+    return weave_tree(left), sign, weave_tree(right)
+
+
+def _evaluate(function: Woven, named: Mapping[str, float]) -> float:
+    result = function(named)
+    if not isinstance(result, float) or not math.isfinite(result):
+        raise UserError("the result is not a real number")
+    return result
 
 
 def _truth(sign: str, left: float, right: float) -> bool | None:

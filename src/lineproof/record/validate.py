@@ -36,7 +36,8 @@ from lineproof.record.plain_data import (
 from lineproof.record.validate_shown import FILES, check_placing, check_table
 
 Data = Mapping[str, Any]
-_KINDS = (*VALUES, *CRITERIA, FIGURE, NOTE, TABLE)
+_USED = frozenset(VALUES)
+_SHOWN = frozenset((*VALUES, *CRITERIA))
 _PIECE = re.compile(r"[A-Za-z0-9][A-Za-z0-9_-]{0,79}\Z")
 """A key or a symbol in the id of an entry."""
 _MOST_KEPT = 8192
@@ -126,22 +127,24 @@ class _Entries:
         if row["key"] in self.parts:
             self.faults.add(f"record: part {row['key'][:40]!r} stands twice")
         self.parts.add(row["key"])
+        what = f"part {row['key'][:40]!r}"
         for entry in row["entries"]:
             try:
-                self._check(_row(entry, f"part {row['key'][:40]!r}"), row["key"])
+                self._check(_row(entry, what), row["key"])
             except UserError as error:
                 self.faults.take(error)
 
     def _check(self, entry: Data, key: str) -> None:
         _ENTRY.need(entry, "entry")
         entry_id, kind, symbol = entry["id"], entry["kind"], entry["symbol"]
-        if kind not in _KINDS or entry_id != f"{key}/{symbol}" or not _is_id(key, symbol):
+        known = kind in _CHECKS and _is_piece(key) and _is_piece(symbol)
+        if not known or entry_id != f"{key}/{symbol}":
             raise UserError(f"record: {entry_id[:80]!r} of kind {kind[:20]!r} is not an entry")
         if entry_id in self.kinds:
             raise UserError(f"record: {entry_id} stands twice")
-        # A table may show checks, line by line.
-        shows = (*VALUES, *CRITERIA) if kind == TABLE else VALUES
-        self._arguments(entry_id, entry.get("args", {}), shows)
+        if "args" in entry:
+            # A table may show checks, line by line.
+            self._arguments(entry_id, entry["args"], _SHOWN if kind == TABLE else _USED)
         self.kinds[entry_id] = kind
         if kind in VALUES:
             check_id(symbol)
@@ -167,9 +170,14 @@ class _Entries:
                         f"record: {entry['id']} is closed by {target}, which follows it"
                     )
 
-    def _arguments(self, entry_id: str, args: object, kinds: tuple[str, ...] = VALUES) -> None:
+    def _arguments(self, entry_id: str, args: object, kinds: frozenset[str] = _USED) -> None:
         if not isinstance(args, dict):
             raise UserError(f"record: {entry_id}: 'args' is not a dict")
+        try:
+            if kinds.issuperset(map(self.kinds.get, args.values())):
+                return
+        except TypeError:  # one rests on a list
+            pass
         for target in args.values():
             kind = self.kinds.get(target) if isinstance(target, str) else None
             if kind is None:
@@ -192,10 +200,6 @@ class _Entries:
             self.files[name] = entry_id
 
 
-def _is_id(*pieces: str) -> bool:
-    return all(map(_is_piece, pieces))
-
-
 @lru_cache(maxsize=_MOST_KEPT)
 def _is_piece(text: str) -> bool:
     return _PIECE.match(text) is not None
@@ -203,13 +207,10 @@ def _is_piece(text: str) -> bool:
 
 def _given(entry_id: str, entry: Data) -> None:
     _GIVEN.need(entry, entry_id)
-    _printed_value(entry_id, entry["printed"], entry["unit"])
-    if "typed" in entry["printed"]:
-        _printed_value(
-            entry_id,
-            {"result": entry["printed"]["typed"], "unit": entry["printed"].get("typed_unit")},
-            entry["unit"],
-        )
+    printed, unit = entry["printed"], entry["unit"]
+    _printed_value(entry_id, printed, unit)
+    if "typed" in printed:
+        _printed_number(entry_id, printed["typed"], printed.get("typed_unit"), unit)
 
 
 def _lookup(entry_id: str, entry: Data) -> None:
@@ -221,12 +222,11 @@ def _line(entry_id: str, entry: Data) -> None:
     _LINE.need(entry, entry_id)
     _, tree = parse_line(entry["formula"])
     _names(entry_id, entry, names_of(tree))
-    printed = entry["printed"]
-    _printed_value(entry_id, printed, entry["unit"])
+    _printed_value(entry_id, entry["printed"], entry["unit"])
     _printed_args(entry_id, entry)
-    if printed.get("coherent") is not None:
-        need(printed, entry_id, coherent=dict)
-        _printed_value(entry_id, printed["coherent"], entry["unit"])
+    if entry["printed"].get("coherent") is not None:
+        need(entry["printed"], entry_id, coherent=dict)
+        _printed_value(entry_id, entry["printed"]["coherent"], entry["unit"])
     _system(entry_id, entry)
 
 
@@ -253,9 +253,9 @@ def _comparison(entry_id: str, entry: Data) -> None:
     _names(entry_id, entry, (*names_of(left), *names_of(right)))
     if not (is_number(entry.get("left")) and is_number(entry.get("right"))):
         raise UserError(f"record: {entry_id} compares something that is no finite number")
+    printed = entry["printed"]
     for side in ("left", "right"):
-        shown_side = {"result": entry["printed"].get(side), "unit": entry["printed"].get("unit")}
-        _printed_value(entry_id, shown_side, entry["unit"])
+        _printed_number(entry_id, printed.get(side), printed.get("unit"), entry["unit"])
     _printed_args(entry_id, entry)
 
 
@@ -288,7 +288,7 @@ _CHECKS = {
 
 
 def _names(entry_id: str, entry: Data, names: tuple[str, ...]) -> None:
-    missing = entry["args"].keys() ^ names
+    missing = entry["args"].keys() ^ names if tuple(entry["args"]) != names else ()
     if missing:
         raise UserError(
             f"record: {entry_id}: {min(missing)[:40]!r} is not both in its formula and its args"
@@ -304,7 +304,10 @@ def _printed_args(entry_id: str, entry: Data) -> None:
 
 
 def _printed_value(entry_id: str, printed: Data, unit: str) -> None:
-    text, shown_unit = printed.get("result"), printed.get("unit")
+    _printed_number(entry_id, printed.get("result"), printed.get("unit"), unit)
+
+
+def _printed_number(entry_id: str, text: object, shown_unit: object, unit: str) -> None:
     if not is_number_text(text):
         raise UserError(f"record: {entry_id}: printed {shown(text)} is not a number")
     known = isinstance(shown_unit, str) and shown_unit in UNITS and unit in UNITS
@@ -313,6 +316,7 @@ def _printed_value(entry_id: str, printed: Data, unit: str) -> None:
 
 
 def _system(entry_id: str, entry: Data) -> None:
-    texts = all(isinstance(unit, str) for unit in entry["numbers"].values())
+    numbers = entry["numbers"]
+    texts = not numbers or all(isinstance(unit, str) for unit in numbers.values())
     if entry["system"] not in _SYSTEMS or not texts:
         raise UserError(f"record: {entry_id}: its system or its constants' units are damaged")
