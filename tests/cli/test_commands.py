@@ -268,6 +268,20 @@ def test_a_replaced_file_keeps_its_permissions(tmp_path: Path) -> None:
     assert [p.name for p in tmp_path.iterdir()] == ["beam.ipynb"]
 
 
+def test_superseded_files_come_back_when_writing_fails(tmp_path: Path) -> None:
+    old, gone, missing = tmp_path / "a.pdf", tmp_path / "a-c.dxf", tmp_path / "a-d.dxf"
+    old.write_bytes(b"old")
+    gone.write_bytes(b"drawing")
+    with pytest.raises(UserError, match="nothing has been changed"):
+        write_all({old: b"new"}, [gone, missing])
+    assert {p.name: p.read_bytes() for p in tmp_path.iterdir()} == {
+        "a.pdf": b"old",
+        "a-c.dxf": b"drawing",
+    }
+    write_all({old: b"new"}, [gone])
+    assert {p.name: p.read_bytes() for p in tmp_path.iterdir()} == {"a.pdf": b"new"}
+
+
 @pytest.mark.parametrize("kind", ["json", "html", "pdf", "ipynb"])
 def test_a_file_without_end_is_not_read_to_its_end(
     kind: str, tmp_path: Path, capsys: Capture

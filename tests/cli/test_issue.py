@@ -156,6 +156,22 @@ def test_drawings_and_tables_are_issued_beside_the_package(
     assert str(first / "B-1-elevation.dxf") in capsys.readouterr().out.splitlines()
 
 
+def test_drawings_of_an_earlier_issue_do_not_stay_beside_the_new_ones(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    folder = tmp_path / "issued"
+    path = save(drawn(unrun), tmp_path / "beam.ipynb")
+    assert main(["issue", str(path)]) == 0
+    (folder / "B1-own.csv").write_text("of the user's own")
+    unrun["cells"][5]["source"] += DRAWN.replace("elevation", "section-a")
+    save(unrun, path)
+    capsys.readouterr()
+    assert main(["issue", str(path)]) == 0
+    assert files_in(folder) == ["B1-bar-schedule.csv", "B1-own.csv", "B1-section-a.dxf", *NAMES]
+    gone = folder / "B1-elevation.dxf"
+    assert f"{gone}: of the earlier issue, not made by this one; removed" in capsys.readouterr().err
+
+
 def test_drawings_of_two_calcs_do_not_overwrite_each_other(
     unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
 ) -> None:

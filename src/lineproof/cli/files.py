@@ -5,15 +5,15 @@ from __future__ import annotations
 import os
 import secrets
 import shutil
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from contextlib import suppress
 from pathlib import Path
 
 from lineproof.errors import UserError
 
 
-def write_all(files: Mapping[Path, bytes]) -> None:
-    """Write all files or none.
+def write_all(files: Mapping[Path, bytes], superseded: Iterable[Path] = ()) -> None:
+    """Write all files or none, and remove those that they supersede under another name.
 
     Every file is first written beside its place, then all are renamed into place; when one
     fails, the earlier files and folders stand again as they were. Raises :class:`UserError`.
@@ -23,6 +23,7 @@ def write_all(files: Mapping[Path, bytes]) -> None:
         for path, content in files.items():
             work.prepare(path, content)
         work.rename()
+        work.set_aside(superseded)
     except OSError as error:
         work.undo()
         place = error.filename2 or error.filename or next(iter(files))
@@ -61,12 +62,18 @@ class _Writing:
     def rename(self) -> None:
         """Put the new files in place, keeping the old ones beside them."""
         for path, beside in self._new.items():
-            old = None
-            if path.exists():
-                old = path.with_name(f".{path.name}{self._mark}.old")
-                path.replace(old)
-            self._old[path] = old
+            self._old[path] = self._kept(path) if path.exists() else None
             beside.replace(path)
+
+    def set_aside(self, paths: Iterable[Path]) -> None:
+        """Take files away, keeping them under another name until all is done."""
+        for path in paths:
+            self._old[path] = self._kept(path)
+
+    def _kept(self, path: Path) -> Path:
+        old = path.with_name(f".{path.name}{self._mark}.old")
+        path.replace(old)
+        return old
 
     def undo(self) -> None:
         """Put everything back as it was."""

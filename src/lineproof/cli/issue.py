@@ -14,6 +14,7 @@ from lineproof.cli.files import write_all
 from lineproof.cli.progress import Progress
 from lineproof.cli.rerun import Rerun, failed_checks, load_all, report_changes, rerun_all
 from lineproof.errors import FaultList, UserError
+from lineproof.notebook.records import read_records
 from lineproof.notebook.reviews import printed_beside
 from lineproof.package.facts import PAPERS
 from lineproof.package.reviewed import PrintedReview
@@ -36,8 +37,9 @@ def run(options: argparse.Namespace) -> int:
     files = _files(reruns, folder, options.paper)
     if options.update:
         files |= {rerun.path.resolve(): rerun.text.encode() for rerun in reruns}
-    write_all(files)
-    return _report(reruns, files)
+    superseded = _superseded(reruns, folder, files)
+    write_all(files, superseded)
+    return _report(reruns, files, superseded)
 
 
 def _check_names(paths: Sequence[Path], folder: Path) -> None:
@@ -139,6 +141,27 @@ def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Pat
     return printed
 
 
+def _superseded(reruns: Sequence[Rerun], folder: Path, files: Iterable[Path]) -> list[Path]:
+    """Return the drawings and tables that only the earlier issue of these calcs has made.
+
+    Left beside the new ones they would be taken for part of this issue.
+    """
+    from lineproof.package import calc_file_names  # noqa: PLC0415 - 0.1 s
+
+    written = {path.name.casefold() for path in files}
+    found: dict[Path, None] = {}
+    for rerun in reruns:
+        try:
+            earlier = read_records(folder / f"{rerun.path.stem}.json")
+        except UserError:  # none, or not a record: nothing is known of an earlier issue
+            continue
+        for record in earlier:
+            for name in calc_file_names(record.data):
+                if name.casefold() not in written and (folder / name).is_file():
+                    found[folder / name] = None
+    return list(found)
+
+
 def _reviews(reruns: Sequence[Rerun]) -> list[PrintedReview | None]:
     """Return what is printed of the review that lies beside each notebook, None for none."""
     faults = FaultList()
@@ -165,11 +188,13 @@ def _refuse_twice(calc_id: str, own: Iterable[Path], others: Iterable[Path]) -> 
     faults.raise_if_any()
 
 
-def _report(reruns: Sequence[Rerun], files: dict[Path, bytes]) -> int:
+def _report(reruns: Sequence[Rerun], files: Iterable[Path], superseded: Iterable[Path]) -> int:
     failed = [sentence for rerun in reruns for sentence in failed_checks(rerun.calc.record)]
     for rerun in reruns:
         for remark in rerun.calc.remarks:
             sys.stderr.write(f"{remark}\n")
+    for path in superseded:
+        sys.stderr.write(f"{path}: of the earlier issue, not made by this one; removed\n")
     for path in files:
         sys.stdout.write(f"{path}\n")
     for rerun in reruns:

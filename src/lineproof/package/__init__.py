@@ -1,6 +1,6 @@
 """The printed package: model, HTML, PDF, and the records read back out of them."""
 
-from lineproof.package.files import calc_files
+from lineproof.package.files import calc_file_names, calc_files
 from lineproof.package.html import to_html
 from lineproof.package.model import Package, build_package
 from lineproof.package.pdf import PrintError, to_pdf
@@ -10,6 +10,7 @@ __all__ = [
     "Package",
     "PrintError",
     "build_package",
+    "calc_file_names",
     "calc_files",
     "records_in_html",
     "records_in_pdf",

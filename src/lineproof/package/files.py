@@ -6,7 +6,7 @@ import codecs
 import csv
 import io
 import re
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from typing import Any
 
 from lineproof.drawing import dxf, from_json
@@ -31,13 +31,22 @@ def file_name(calc_id: str) -> str:
 
 def calc_files(record: Mapping[str, Any]) -> dict[str, bytes]:
     """Return the files that a record's figures and tables ask for, by name."""
+    return {name: _WRITERS[ending](entry) for name, ending, entry in _asked(record)}
+
+
+def calc_file_names(record: Mapping[str, Any]) -> list[str]:
+    """Return the names of :func:`calc_files` without making the files."""
+    return [name for name, _, _ in _asked(record)]
+
+
+def _asked(record: Mapping[str, Any]) -> Iterator[tuple[str, str, Mapping[str, Any]]]:
+    """Yield name, ending and entry of every file that a record asks for."""
     start = file_name(record["calc"]["id"])
-    return {
-        f"{start}-{entry[ending]}.{ending}": _WRITERS[ending](entry)
-        for part in record["parts"]
-        for entry in part["entries"]
-        if (ending := FILES.get(entry["kind"], "")) and entry.get(ending)
-    }
+    for part in record["parts"]:
+        for entry in part["entries"]:
+            ending = FILES.get(entry["kind"], "")
+            if ending and entry.get(ending):
+                yield f"{start}-{entry[ending]}.{ending}", ending, entry
 
 
 def _drawing(entry: Mapping[str, Any]) -> bytes:
