@@ -36,7 +36,8 @@ class MomentPiece:
     """Moments of one span at stations ``x`` along the beam [mm]; resistances as magnitudes.
 
     ``M_max`` and ``M_min`` are the largest and smallest over all cases, positive where the
-    bottom is in tension [N.mm].
+    bottom is in tension [N.mm]. Bars must carry within ``asked``, along the beam [mm]; without,
+    from face to face.
     """
 
     span: int
@@ -45,6 +46,7 @@ class MomentPiece:
     M_min: Sequence[float]
     M_r_pos: Sequence[float]
     M_r_neg: Sequence[float]
+    asked: tuple[float, float] | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -109,7 +111,7 @@ def moment_figure(
                             p.M_max, p.M_min, p.M_r_pos, p.M_r_neg, strict=True
                         )
                     ],
-                    outline.faces(p.span),
+                    p.asked or outline.faces(p.span),
                 )
             ),
         ),

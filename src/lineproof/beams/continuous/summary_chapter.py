@@ -27,7 +27,7 @@ from lineproof.beams.continuous.figure_loads import loads_figure
 from lineproof.beams.continuous.imported_record import REACTIONS_TITLE
 from lineproof.beams.continuous.model import LOADS, Model
 from lineproof.beams.continuous.resistance import provide
-from lineproof.beams.continuous.resistance_demand import stretches_at
+from lineproof.beams.continuous.resistance_demand import covered_length, stretches_at
 from lineproof.beams.continuous.restraint import left_out
 from lineproof.beams.continuous.summary_supports import COLUMNS as FOR_COLUMNS
 from lineproof.beams.continuous.summary_supports import TITLE as FOR_SUPPORTS
@@ -188,9 +188,11 @@ def _record_envelopes(design: Design) -> None:
         inside = np.clip(local + left, start + INSIDE, end - INSIDE)
         V_r = [met.V_r for met in stretches_at(design.designed, inside)]
         x = (local + left).tolist()
+        first, last = covered_length(design.designed, span)  # bars end short of a free end
+        asked = max(start, left + first), min(end, left + last)
         moments.append(
             MomentPiece(span, x, M.max(0).tolist(), M.min(0).tolist(), bottom.tolist(),
-                        top.tolist())
+                        top.tolist(), asked)
         )  # fmt: skip
         shears.append(ShearPiece(span, x, V.max(0).tolist(), V.min(0).tolist(), V_r))
     bent, sheared = list(moment_sections(design)), list(shear_sections(design))
