@@ -296,7 +296,7 @@ def hook_part(designed: Designed, support: int, size: str, *, spread: bool | Non
     if hook_leg(size, WIDEST_BENDS) > depth - 2 * (outline.cover + d_bs):
         return 0.0
     l_av = available(designed, support)
-    if not holds(hooks.LEAST_FITS, d_b=BARS.number(size, "d_b"), l_av=l_av):
+    if not holds(hooks.FITS, d_b=BARS.number(size, "d_b"), l_av=l_av):
         return 0.0
     return min(l_av / hook_at(designed, support, size, spread=spread).l_dh, 1.0)
 

@@ -1,7 +1,7 @@
 """What bars of a size hold at the end supports, by hooks or straight, in full or in part.
 
-A bar counts by the length that its support gives over that which it needs: so the clauses on hooks
-and on straight bars let steel in excess of that required be shorter (12.2.5, 12.5.3).
+A bar counts with the part that the length in its support is of that which it needs: steel in excess
+of that required lets a straight bar or a hook be as much shorter (12.2.5, 12.5.3).
 """
 
 from __future__ import annotations
@@ -35,6 +35,8 @@ def least_anchored(bare: Designed, span: int, size: str, needed: float) -> float
 
 def _least_at(bare: Designed, support: int, size: str, needed: float) -> float:
     A_b, hooked = BARS.number(size, "A_b"), hook_part(bare, support, size)
+    if hooked >= 1:
+        return needed
     for number in range(2, MOST_BARS + 1):
         bar = Bar("bottom", "web", 1, size, spaced(number), _depth(bare, support))
         if number * A_b * max(hooked, _straight(bare, support, bar)) >= needed:
@@ -52,15 +54,15 @@ def top_part(bare: Designed, support: int, top: TopBars) -> float:
     size, h, beside = top.web.size, _depth(bare, support), top.sides * top.overhang
     hooked = hook_part(bare, support, size, spread=beside > 0)
     web = Bar("top", "web", 1, size, spaced(top.web.number), h)
-    area = top.web.area * _ended(bare, support, web, hooked)
+    area = top.web.area * _counted(bare, support, web, hooked)
     if beside:
         room = room_beside(bare, [1 if support == 1 else len(bare.outline.lengths)])
         spread = Bar("top", "overhang", 1, size, beside, h, room)
-        area += (top.area - top.web.area) * _ended(bare, support, spread, hooked)
+        area += (top.area - top.web.area) * _counted(bare, support, spread, hooked)
     return area / top.area
 
 
-def _ended(bare: Designed, support: int, bar: Bar, hooked: float) -> float:
+def _counted(bare: Designed, support: int, bar: Bar, hooked: float) -> float:
     """Return the part of a top bar that counts: straight where it develops so, else by its hook."""
     straight = _straight(bare, support, bar)
     return straight if straight >= 1 or hooked == 0 else hooked

@@ -180,7 +180,7 @@ def top_trial(rules: Rules, stirrup: str, part: Part) -> Trial:
             checks = max(faces, key=lambda face: max(face.values()))
             if not fails(checks):
                 return Chosen(section.name, bars, checks), ""
-            whole = [top_checks(dict(at), rules, bars, stirrup) for at in section.numbers]
+            whole = (top_checks(dict(at), rules, bars, stirrup) for at in section.numbers)
             by_anchorage = counted < 1 and not any(map(fails, whole))
             why[ANCHORAGE if by_anchorage else worst_of(checks)] += 1
         return None, ANCHORAGE if why[ANCHORAGE] else why.most_common(1)[0][0]

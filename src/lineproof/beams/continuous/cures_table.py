@@ -47,7 +47,7 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
     torsion.SECTION: _WEB,
     torsion.CORNER_BARS: ("s",),
     development.DEVELOPED: ("bars", "f_c", "b_sp"),
-    hooks.FITS: ("bars", "f_c", "b_sp"),
+    hooks.FITS: ("bars", "b_sp"),
     cutoff.DEVELOPED_AT_ZERO_MOMENT: ("bars", "A_s", "h", "f_c"),
     bearing.STRENGTH: ("b_w", "f_c"),
     shear_bars.HANGERS_PROVIDED: ("n_h",),

@@ -243,10 +243,8 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
 def _record_fit(writers: Writers, steps: Steps, support: int, c_end: float) -> None:
     _bind_support(writers, steps, support, c_end)
     steps.line(hooks.AVAILABLE)
-    if steps.holds(hooks.FITS):
-        steps.check(hooks.FITS)
-    elif steps.check(hooks.LEAST_FITS):
-        steps.decide(hooks.IN_PART)
+    steps.check(hooks.FITS)
+    steps.decide(hooks.IN_PART)
 
 
 def record_end_bottom(site: Site, hooked: Hooks) -> None:
@@ -318,9 +316,6 @@ def record_end_top(site: Site) -> None:
             steps = Steps(sheet, dict(site.longest(tuple(same))))
             _bind_support(writers, steps, support, _beyond(writers, support, same))
             steps.line(hooks.AVAILABLE)
-            if steps.holds(development.DEVELOPED):
-                steps.check(development.DEVELOPED)
-                continue
-            steps.decide(development.IN_PART)
-            if has_hooks(writers.designed) and not steps.holds(hooks.LEAST_FITS):
-                steps.decide(hooks.LEAST_FITS)  # why they are straight
+            in_part = steps.decide(development.IN_PART)
+            if in_part and has_hooks(writers.designed) and not steps.holds(hooks.FITS):
+                steps.decide(hooks.FITS)  # why they are straight

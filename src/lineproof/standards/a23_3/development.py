@@ -202,10 +202,11 @@ DEVELOPED = _criterion(
 IN_PART = _criterion(
     "l_av < l_d",
     clause="12.2.5",
-    title="Bars developed in part",
+    title="Whether the bars are developed in part",
     basis=FROM_MEMORY,
-    yes="The bars count with the part l_av/l_d of their area, at the face of the support and "
-    "wherever else they are used: more steel than required lets the length be shorter.",
+    yes="Of the area of the bars as much counts as the first length is of the second, at the face "
+    "of the support and wherever else they are used: more steel than required lets the length be "
+    "shorter.",
     no="The bars are developed in full.",
     key="development-in-part",
 )

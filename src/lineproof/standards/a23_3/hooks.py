@@ -158,15 +158,6 @@ TIES_CLEAR = _criterion(
     key="hook-ties-clear",
 )
 FITS = _criterion(
-    "l_dh <= l_av",
-    clause="12.5.1",
-    title="Length for the hook",
-    basis=FROM_MEMORY,
-    yes="The hook fits.",
-    no="The hook does NOT fit: thinner bars, a deeper support or more bars.",
-    key="hook-fits",
-)
-LEAST_FITS = _criterion(
     "max(8*d_b, 150) <= l_av",
     clause="12.5.1",
     title="Least length for the hook",
@@ -179,7 +170,7 @@ LEAST_FITS = _criterion(
 IN_PART = _criterion(
     "l_av < l_dh",
     clause="12.5.3",
-    title="Hooks developed in part",
+    title="Whether the hook is developed in part",
     basis=FROM_MEMORY,
     yes="Of the area of the bars as much counts as the first length is of the second, at the face "
     "of the support and wherever else they are used: more steel than required lets the hook be "
@@ -204,5 +195,5 @@ def basic_length(pair: CodePair) -> Formula:
 
 
 FORMULAS = (BASIC, L_DH, L_DH_EXCESS, SIDE_COVER, SIDE_COVER_COLUMN, FACE_COVER, AVAILABLE)
-CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, TIES_CLEAR, FITS, LEAST_FITS, IN_PART)
+CRITERIA = (SIDE_COVERED, TAIL_COVERED, FACE_COVERED, TIED, TIES_CLEAR, FITS, IN_PART)
 TABLES = (COVER_FACTORS, TIE_FACTORS, DENSITY_FACTORS, COATING_FACTORS)
