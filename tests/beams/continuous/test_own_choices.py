@@ -53,6 +53,16 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "columns": {1: ["350 mm x 350 mm x 3.2 m"] * 2, 3: ["350 mm x 350 mm x 3.2 m"]},
         "slab_bars": "2 x 10M at 300 mm",
     },
+    "thick top bars at an assumed restraint": {  # not developed at the section of shear beside it
+        "spans": ["1.9 m", "7.3 m"], "supports": ["free", "girder 400 mm", "column 700 mm"],
+        "b_w": "280 mm", "h": "700 mm", "spacing": "4.7 m", "shape": "rectangular", "h_f": None,
+        "floor_weight": "3.4 kPa", "superimposed": "3.6 kPa",
+    },
+    "two layers of top bars at an assumed restraint": {
+        "spans": ["7.9 m", "7.8 m"], "supports": ["column 400 mm", "column 700 mm", "wall 400 mm"],
+        "b_w": "300 mm", "h": "700 mm", "spacing": "5.6 m", "shape": "rectangular", "h_f": None,
+        "floor_weight": "3.4 kPa", "superimposed": "3.1 kPa",
+    },
 }  # fmt: skip
 
 

@@ -53,12 +53,15 @@ def top_part(bare: Designed, support: int, top: TopBars) -> float:
         return 1.0
     size, h, beside = top.web.size, _depth(bare, support), top.sides * top.overhang
     hooked = hook_part(bare, support, size, spread=beside > 0)
-    web = Bar("top", "web", 1, size, spaced(top.web.number), h)
-    area = top.web.area * _counted(bare, support, web, hooked)
+    area = 0.0
+    for number, layer in enumerate(top.layers, start=1):
+        web = Bar("top", "web", number, size, spaced(layer.number), h)
+        area += layer.area * _counted(bare, support, web, hooked)
     if beside:
         room = room_beside(bare, [1 if support == 1 else len(bare.outline.lengths)])
         spread = Bar("top", "overhang", 1, size, beside, h, room)
-        area += (top.area - top.web.area) * _counted(bare, support, spread, hooked)
+        in_overhangs = top.area - sum(layer.area for layer in top.layers)
+        area += in_overhangs * _counted(bare, support, spread, hooked)
     return area / top.area
 
 

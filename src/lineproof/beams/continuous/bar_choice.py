@@ -11,7 +11,7 @@ from collections import Counter
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.bars import BarLayer, BarLayers, TopBars, in_line
+from lineproof.beams.bars import MOST_LAYERS, BarLayer, BarLayers, TopBars, in_line
 from lineproof.beams.choice import MOST_BARS, SIZES, bars_for
 from lineproof.beams.continuous.numbers import Numbers, value
 from lineproof.beams.continuous.section_checks import (
@@ -63,35 +63,39 @@ class Chosen:
         return key, self.checks[key]
 
 
-Trial = Callable[[Section, str], tuple[Chosen | None, str]]
-"""Find the best bars of one size for a section, or say which check stopped them."""
+Trial = Callable[[Section, str, int], tuple[Chosen | None, str]]
+"""Find the best bars of one size in so many layers, or say which check stopped them."""
 
 
 def choose(sections: Sequence[Section], trial: Trial, what: str) -> tuple[Chosen, ...]:
     """Return bars for every section by the stated order; raises :class:`UserError` if none do."""
-    found: dict[str, list[Chosen | None]] = {}
+    found: dict[str, list[Chosen | None]] = {size: [None] * len(sections) for size in SIZES}
     stopped: dict[str, Counter[str]] = {section.name: Counter() for section in sections}
-    for size in SIZES:
-        row = []
-        for section in sections:
-            chosen, why = trial(section, size)
-            row.append(chosen)
-            if chosen is None:
-                stopped[section.name][why] += 1
-        found[size] = row
-    alike = [[c for c in row if c is not None] for row in found.values()]
-    whole = [row for row in alike if len(row) == len(sections)]
-    if whole:
-        return tuple(min(whole, key=lambda row: order(row, sections)))
+    # A second layer is worse than any bars in one: none is tried where one layer does everywhere.
+    for layers in range(1, MOST_LAYERS + 1):
+        for size, row in found.items():
+            for place, section in enumerate(sections):
+                if row[place] is None:
+                    row[place], why = trial(section, size, layers)
+                    if why:
+                        stopped[section.name][why] += 1
+        alike = [[c for c in row if c is not None] for row in found.values()]
+        whole = [row for row in alike if len(row) == len(sections)]
+        if whole:
+            return tuple(min(whole, key=lambda row: order(row, sections)))
     return tuple(_each_its_own(sections, found, stopped, what))
 
 
 def order(row: Iterable[Chosen], sections: Iterable[Section]) -> tuple[int, float, int]:
     """Return what is least in the best choice: second layers, mass, bars."""
     pairs = list(zip(row, sections, strict=True))
-    second = sum(isinstance(c.bars, tuple) and len(c.bars) > 1 for c, _ in pairs)
+    second = sum(len(_layers(c.bars)) > 1 for c, _ in pairs)
     mass = sum(_area(c.bars) * s.length for c, s in pairs)
     return second, round(mass, 3), sum(_number(c.bars) for c, _ in pairs)
+
+
+def _layers(bars: Bars) -> BarLayers:
+    return bars.layers if isinstance(bars, TopBars) else bars
 
 
 def _area(bars: Bars) -> float:
@@ -99,9 +103,8 @@ def _area(bars: Bars) -> float:
 
 
 def _number(bars: Bars) -> int:
-    if isinstance(bars, TopBars):
-        return bars.web.number + bars.sides * bars.overhang
-    return sum(layer.number for layer in bars)
+    beside = bars.sides * bars.overhang if isinstance(bars, TopBars) else 0
+    return sum(layer.number for layer in _layers(bars)) + beside
 
 
 def _each_its_own(
@@ -134,9 +137,9 @@ def _said(key: str) -> str:
 def bottom_trial(rules: Rules, stirrup: str) -> Trial:
     """Return the search for the least bottom bars of one size."""
 
-    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+    def trial(section: Section, size: str, number: int) -> tuple[Chosen | None, str]:
         why: Counter[str] = Counter()
-        for layers in _bottom_layouts(size):
+        for layers in _layouts(size, number):
             if _area(layers) < section.least:
                 why[FOR_SHEAR] += 1
                 continue
@@ -149,16 +152,18 @@ def bottom_trial(rules: Rules, stirrup: str) -> Trial:
     return trial
 
 
-def _bottom_layouts(size: str) -> list[BarLayers]:
-    """Return layouts of one size, one layer before two, least bars first."""
-    made: list[BarLayers] = [(BarLayer(n, size),) for n in range(2, MOST_BARS + 1)]
+def _layouts(size: str, layers: int) -> list[BarLayers]:
+    """Return the bars of one size within the web in one layer or in two, least bars first."""
+    first = range(2, MOST_BARS + 1)
+    if layers == 1:
+        return [(BarLayer(n, size),) for n in first]
     two = [
         (BarLayer(n, size), BarLayer(m, size))
-        for n in range(2, MOST_BARS + 1)
+        for n in first
         for m in range(2, n + 1)
         if in_line(n, m)
     ]
-    return made + sorted(two, key=lambda pair: (pair[0].number + pair[1].number, pair[1].number))
+    return sorted(two, key=lambda pair: (pair[0].number + pair[1].number, pair[1].number))
 
 
 Part = Callable[[str, TopBars], float]
@@ -169,10 +174,11 @@ def top_trial(rules: Rules, stirrup: str, part: Part) -> Trial:
     """Return the search for the least top bars of one size; each face must pass."""
     sides = {"T": 2, "L": 1, "rectangular": 0}[rules.shape]
 
-    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+    def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, str]:
         why: Counter[str] = Counter()
-        for bars in _top_layouts(section, size, sides):
-            if bars.web.area < section.least or bars.area < section.least_all:
+        for bars in _top_layouts(section, size, sides, layers):
+            within = sum(layer.area for layer in bars.layers)
+            if within < section.least or bars.area < section.least_all:
                 why[FOR_SHEAR] += 1
                 continue
             counted = part(section.name, bars)
@@ -188,18 +194,21 @@ def top_trial(rules: Rules, stirrup: str, part: Part) -> Trial:
     return trial
 
 
-def _top_layouts(section: Section, size: str, sides: int) -> list[TopBars]:
-    """Return layouts of one size, least area first, then most bars within the web."""
+def _top_layouts(section: Section, size: str, sides: int, layers: int) -> list[TopBars]:
+    """Return layouts of one size, least area first, then most bars within the web.
+
+    Of the same area, those with the fewest bars in a second layer come first.
+    """
     least = most = 0
     if sides:
         least = max(bars_for(_spread(at), size) for at in section.numbers)
         most = min(_most_beside(at, size) for at in section.numbers)
     made = [
-        TopBars(BarLayer(n, size), beside, sides)
-        for n in range(2, MOST_BARS + 1)
+        TopBars(web[0], beside, sides, upper=web[1] if layers > 1 else None)
+        for web in _layouts(size, layers)
         for beside in range(least, max(least, most) + 1)
     ]
-    return sorted(made, key=lambda bars: (bars.area, bars.overhang))
+    return sorted(made, key=lambda bars: (bars.area, _number(bars) - bars.web.number))
 
 
 def _most_beside(at: Numbers, size: str) -> int:

@@ -24,6 +24,7 @@ from lineproof.beams.continuous.detailing_through import run_through
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length
 from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import section_depth, shear_depth
 
 BESIDE = 300.0
 """Bars that would end so near the face of an end support, or beyond it, run in [mm]."""
@@ -48,13 +49,16 @@ def with_restraint(
     """Return a reach that is enough at an end whose restraint is assumed.
 
     There all bars reach a quarter of the clear span past the face (common practice), and are
-    developed at the face.
+    developed at the section of shear beside it.
     """
-    if support_of(span, near) not in designed.restrained:
+    support = support_of(span, near)
+    if support not in designed.restrained:
         return found
     start, end = designed.outline.faces(span)
     l_d = max(development_length(designed, run) for run in groups)
-    least = ceil50(half_of(designed, span, near) + max((end - start) / 4, l_d))
+    h = designed.outline.depths[span - 1]
+    d_v = shear_depth(section_depth(designed, "top", span, support), h)
+    least = ceil50(half_of(designed, span, near) + max((end - start) / 4, d_v + l_d))
     most = designed.outline.lengths[span - 1]
     return Reach(
         max(found.long, min(least, most)), max(found.short, min(least, most)), found.through

@@ -165,11 +165,11 @@ def _bottom_in_part(design: Design, key: str, span: int) -> dict[str, Entry]:
 
 
 def _top_in_part(design: Design, face: Face, top: TopBars) -> dict[str, Entry]:
-    """Record top bars where they count in part; return their d and A_s, else nothing.
+    """Record top bars that count in part or stand in two layers; return their d and A_s.
 
-    Chosen ones do only in an end support.
+    Nothing for others. Chosen ones count in part only in an end support.
     """
-    if not design.given and 1 < face.support <= design.model.spans:
+    if not design.given and top.of_one_size and 1 < face.support <= design.model.spans:
         return {}
     title = f"{face.name.capitalize()}: top bars"
     area = top.area if top.of_one_size else None

@@ -101,11 +101,11 @@ def choose_bottom(
     numbered = {section.name: span for span, section in sections.items()}
     search = bottom_trial(rules, stirrup)
 
-    def trial(section: Section, size: str) -> tuple[Chosen | None, str]:
+    def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, str]:
         at_ends = least_anchored(numbered[section.name], size) if least_anchored else 0.0
         if math.isinf(at_ends):
             return None, ANCHORAGE
-        return search(replace(section, least=max(section.least, at_ends)), size)
+        return search(replace(section, least=max(section.least, at_ends)), size, layers)
 
     found = choose(list(sections.values()), trial, "bottom_bars")
     return made | dict(zip(sections, found, strict=True))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping, Sequence
+from collections.abc import Mapping
 from typing import Any
 
 from lineproof.beams.continuous.bars_counted import record_area
@@ -13,10 +13,8 @@ from lineproof.beams.continuous.bearing import (
     record_hangers,
 )
 from lineproof.beams.continuous.case_forces import factor_text, record_forces
-from lineproof.beams.continuous.cutoff_sets import Group as BarGroup
-from lineproof.beams.continuous.cutoff_sets import groups_met, groups_of_layers
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.developed import bars_of, record_groups
+from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
 from lineproof.beams.continuous.faces import faces_of, has_sag, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
@@ -32,12 +30,16 @@ from lineproof.beams.continuous.interface import (
 )
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
-from lineproof.beams.continuous.resistance import effective_depth, top_layers
 from lineproof.beams.continuous.restraint import SHARES
+from lineproof.beams.continuous.shear_depths import (
+    depth_of_bars,
+    depth_of_layers,
+    depth_with_restraint,
+)
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_restrained_record import record_restrained
 from lineproof.beams.continuous.shear_sections import ShearSection
-from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over, depth_over
+from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over
 from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.continuous.support_turning import record_support_torques
 from lineproof.beams.continuous.symbols import stated
@@ -47,8 +49,6 @@ from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars
-from lineproof.standards.a23_3.bars import BARS
 
 STIRRUPS = "stirrups"
 MORE_BARS = "More bars than the moments ask for: {}."
@@ -57,9 +57,6 @@ AT_GIRDER = (
     "its face."
 )
 _SAME = 1e-9
-DEPTH = "depth-"
-_FACES = {"bottom": "sag-", "top": "hog-"}
-"""How the keys of the sections of flexure with a face in tension begin."""
 THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
     "far as moment, shear and torsion together ask for, and the bars in the corners of the "
@@ -101,7 +98,8 @@ def record_shear(design: Design) -> None:
             support = section.span if section.end == "left" else section.span + 1
             restrained = support in design.designed.restrained
             if restrained and section.key == f"shear-{section.span}-{section.end}":
-                record_restrained(model, choice.basis, section, more)
+                d = depth_with_restraint(design, section)
+                record_restrained(model, choice.basis, section, more, d)
     _record_supports(design, alike)
     if model.inputs.slab_bars is not None and model.inputs.slab:
         _record_interfaces(design)
@@ -145,7 +143,7 @@ def record_one_section(design: Design, section: ShearSection, more: Mapping[str,
     model = design.model
     sheet, span = model.sheet, section.span
     support = span if section.end == "left" else span + 1
-    d = _depth_of_layers(design, section)
+    d = depth_of_layers(design, section)
     with sheet.part(section.key, section.title):
         place = span_place(sheet, model.inputs, span)
         width = sheet.entries_of(GIVEN).get(f"b_s{support}")
@@ -153,91 +151,13 @@ def record_one_section(design: Design, section: ShearSection, more: Mapping[str,
         place |= {"b_w": sheet.entry(f"{GIVEN}/b_w"), **more}
         sheet.stand_for(place)
         steps = Steps(sheet, place)
-        steps.bind(d=_depth_of_bars(design, steps, section) if d is None else d)
+        steps.bind(d=depth_of_bars(design, steps, section) if d is None else d)
         _record_bars(design, steps, section)
         x = record_place(steps, section)
         record_forces(steps, model, section.demand, section.end, x=x)
         if model.imported is not None and model.imported.has_torsion(span):
             record_imported_torsion(steps, model.imported, section.demand, section.end)
         record_section(steps, design.stirrups.basis, section)
-
-
-def _depth_of_layers(design: Design, section: ShearSection) -> Entry | None:
-    """Return the depth of the section from the bars of a section of flexure.
-
-    It stands there already, of bars on the face in tension, or is recorded in a part of its own
-    where several sizes or layers have it; None for bars of one size alone.
-    """
-    sheet, designed, span = design.model.sheet, design.designed, section.span
-    for key in _nearest_first(section, [part.key for part in sheet.parts]):
-        known = sheet.entries_of(key).get("d")
-        if known is not None and _is_depth(known.value, section):
-            return known
-    for where, groups, d in _several(design, section):
-        one = len(groups) == 1 and groups[0].layer == 1
-        if one or not groups or not _is_depth(d, section):
-            continue
-        with sheet.part(f"{DEPTH}{section.key}", f"Span {span}: depth of the bars {where}"):
-            steps = Steps(sheet, span_place(sheet, design.model.inputs, span))
-            stirrup = designed.basis.stirrups.size
-            steps.bind(c_c=sheet.find("c_c"), d_bs=sheet.lookup("d_bs", BARS, stirrup, "d_b"))
-            record_groups(steps, [(group, None) for group in groups], "the section")
-        return sheet.entries_of(f"{DEPTH}{section.key}")["d"]
-    return None
-
-
-def _nearest_first(section: ShearSection, keys: Iterable[str]) -> list[str]:
-    """Return the parts that may hold the depth of a section, those of its span and end first."""
-    support = section.span if section.end == "left" else section.span + 1
-    side = "right" if section.end == "left" else "left"
-    own = (f"sag-{section.span}", f"hog-{support}-{side}", f"hog-{support}-")
-    faces = ("sag-", "hog-") if section.mixed else (_FACES[section.tension],)
-    kept = [key for key in keys if key.startswith((*faces, DEPTH))]
-
-    def far(key: str) -> int:
-        return next((n for n, start in enumerate(own) if key.startswith(start)), len(own))
-
-    return sorted(kept, key=far)
-
-
-def _several(
-    design: Design, section: ShearSection
-) -> Iterator[tuple[str, Sequence[BarGroup], float]]:
-    """Give the bars whose depth a section of shear may have: where they lie, and their depth [mm].
-
-    They are those of the sections of flexure, and those that stand along the span: of the face in
-    tension, or of either where the smaller depth of both is used.
-    """
-    designed, span = design.designed, section.span
-    faces: tuple[Face, ...] = ("bottom", "top") if section.mixed else (section.tension,)
-    h = designed.outline.depths[span - 1]
-    below = (f"below span {span}", designed.bars.bottom[span - 1])
-    above = [(f"above support {j}", top_layers(designed, j)) for j in (span, span + 1)]
-    for where, layers in (below, *above):
-        yield where, groups_of_layers(layers), effective_depth(designed, layers, h)
-    found = (over for face in faces for over in bars_over(designed, design.standing, face, span))
-    for over in found:
-        if over.shares:
-            runs = (share.run for share in over.shares)
-            yield "that stand there", groups_met(designed, runs), depth_over(designed, span, over)
-
-
-def _is_depth(d: float, section: ShearSection) -> bool:
-    return abs(d - section.d) <= _SAME * section.d
-
-
-def _depth_of_bars(design: Design, steps: Steps, section: ShearSection) -> Entry:
-    """Record inside the open part the depth of bars of one size in one layer, and return it."""
-    sheet = steps.sheet
-    sizes = {design.designed.bars.holders, *(run.size for run in design.runs)}
-    for size in sorted(sizes):
-        d_b = BARS.number(size, "d_b")
-        at = (steps.entry(n).value for n in ("h", "c_c", "d_bs"))
-        if _is_depth(bars.DEPTH_ONE_LAYER.function(*at, d_b), section):
-            bound = sheet.lookup("d_b", BARS, size)
-            return steps.line(bars.DEPTH_ONE_LAYER, d_b=bound)
-    msg = f"{section.key}: no bars lie at the depth {section.d!r}"
-    raise AssertionError(msg)
 
 
 def _record_bars(design: Design, steps: Steps, section: ShearSection) -> None:

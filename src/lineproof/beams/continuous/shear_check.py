@@ -211,10 +211,13 @@ class SpanCheck:
             asked[:, column] |= end.held != "free"
         bottom, top = (np.where(self.state.nearer, 0.0, F / force) for F in self._by_face(asked))
         for column, w in self.state.held.items():
+            near = self.state.numbers.left if column == 0 else self.state.numbers.right
             reasons = self.critical("left" if column == 0 else "right").reason
             uncapped = w["counts"][:, 0] | np.array([bool(reason) for reason in reasons])
             F = tension(w, self.effective[:, [column]], self.state.basis)[:, 0]
-            top[:, column] = np.maximum(top[:, column], np.where(uncapped, F / force, 0.0))
+            most = math.inf if near.A_sr is None else near.A_sr
+            needed = np.where(uncapped, F / force, np.minimum(F / force, most))
+            top[:, column] = np.maximum(top[:, column], needed)
         return (bottom, here), (top, there)
 
     def _by_face(self, asked: Truths) -> tuple[Floats, Floats]:

@@ -29,24 +29,35 @@ _NO_RESISTANCE = (
 )
 
 
+def restrained_key(section: ShearSection) -> str:
+    """Return the key of the part that holds a section at an end with its restraint."""
+    return f"{section.key}-restraint"
+
+
 def record_restrained(
-    model: Model, basis: ShearBasis, section: ShearSection, more: Mapping[str, Entry]
+    model: Model,
+    basis: ShearBasis,
+    section: ShearSection,
+    more: Mapping[str, Entry],
+    d: Entry | None,
 ) -> None:
     """Record the shear and the top bars of a section at an end with its restraint, in a part.
 
-    ``more`` are the stirrups and the torsion of the span. Needs the part of the section.
+    ``more`` are the stirrups and the torsion of the span, ``d`` the depth of the top bars, None
+    where none stand: then it is that of the face. Needs the part of the section.
     """
     sheet, span = model.sheet, section.span
     hog = sheet.entries_of(f"hog-{span}-right" if section.end == "left" else f"hog-{span + 1}-left")
     own = sheet.entries_of(section.key)
     title = f"{section.title}: with the restraint assumed"
-    with sheet.part(f"{section.key}-restraint", title):
+    with sheet.part(restrained_key(section), title):
         sheet.note("restraint", _RESTRAINT, title="Restraint", basis=COMMON_PRACTICE)
         below = section.tension == "bottom"
         top = own["A_sp"] if below else own["A_s"]
         place = span_place(sheet, model.inputs, span) | dict(more)
         place |= {n: own[n] for n in ("V_f", "T_f", "T_fr") if n in own}
         place |= {n: hog[n] for n in ("M_f", "d", "A_sr") if n in hog}
+        place |= {} if d is None else {"d": d}
         place |= {"b_w": sheet.entry(f"{GIVEN}/b_w"), "A_s": top}
         sheet.stand_for(place)
         steps = Steps(sheet, place)
