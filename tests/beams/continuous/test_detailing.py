@@ -10,10 +10,11 @@ import pytest
 from hypothesis import HealthCheck, Phase, given, settings
 
 from lineproof.beams.bars import BarLayer
+from lineproof.beams.continuous.anchorage import hook_at
 from lineproof.beams.continuous.cutoff import Frame, zone_at
 from lineproof.beams.continuous.cutoff_ends import bottom_side, passes, top_side
 from lineproof.beams.continuous.cutoff_need import need_of
-from lineproof.beams.continuous.detailing import hook_ties, lay_bars
+from lineproof.beams.continuous.detailing import beside_ties, hook_ties, lay_bars
 from lineproof.beams.continuous.detailing_bottom import lay_bottom
 from lineproof.beams.continuous.detailing_data import (
     Designed,
@@ -23,7 +24,7 @@ from lineproof.beams.continuous.detailing_data import (
 )
 from lineproof.beams.continuous.detailing_holders import with_holders
 from lineproof.beams.continuous.detailing_record import record_detailing
-from lineproof.beams.continuous.layout import BarRun, BeamOutline
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, StirrupZone
 from lineproof.beams.continuous.resistance import in_line, lap_pairs, stand
 from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.errors import UserError
@@ -290,9 +291,30 @@ def test_ties_around_the_hooks() -> None:
     runs = lay_bars(designed)
     sizes = {run.size for run in runs if run.hook_start}
     assert sizes == {"25M"}
-    first, last = hook_ties(designed, runs)
+    first, last = hook_ties(designed, runs, ())
     assert (first.span, first.start, first.number, first.spacing) == (1, -150.0, 4, 75.0)
     assert (last.span, last.end) == (3, designed.outline.axes[-1] + 150.0)
+
+
+def test_ties_at_a_free_end_take_the_place_of_stirrups() -> None:
+    """Ties at 75 mm over the hook of 25M bars at least, the first stirrup 100 mm beyond.
+
+    The bars end at 50 mm; l_dh is that of the tests of hooks.
+    """
+    cantilever = beam_of((2000.0, 7600.0), ("free", "elastic", "elastic"))
+    designed = designed_sections(cantilever, "25M", "15M")
+    bars = (BarRun("top", 1, 2, "25M", 50.0, 4000.0, hook_start="90"),)
+    l_dh = hook_at(designed, 1, "25M").l_dh
+    stirrups = StirrupZone(1, 75.0, 1575.0, 6, 300.0, "10M")
+    (kept,) = beside_ties(designed, bars, [stirrups])
+    (ties,) = hook_ties(designed, bars, [kept])
+    assert kept.start in {75.0 + 300.0 * n for n in range(6)}
+    assert (kept.end, kept.spacing) == (1575.0, 300.0)
+    assert kept.number == 1 + (1575.0 - kept.start) / 300.0
+    assert ties.spacing == 75.0  # 3 x 25.2 = 75.6, down to 5 mm
+    assert ties.end == pytest.approx(kept.start - 100.0)
+    assert 50.0 <= ties.start < 125.0
+    assert 50.0 + l_dh <= ties.end < 50.0 + l_dh + 300.0
 
 
 def test_bars_of_the_2024_edition_are_straight() -> None:

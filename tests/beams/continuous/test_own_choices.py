@@ -58,6 +58,12 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "b_w": "280 mm", "h": "700 mm", "spacing": "4.7 m", "shape": "rectangular", "h_f": None,
         "floor_weight": "3.4 kPa", "superimposed": "3.6 kPa",
     },
+    "a load at the tip of a cantilever": {  # straight bars are hardly developed there
+        "spans": ["1.2 m", "6.7 m"], "supports": ["free", "girder 600 mm", "girder 300 mm"],
+        "h": "610 mm", "b_w": "400 mm", "shape": "rectangular", "h_f": None,
+        "floor_weight": "3.4 kPa", "spacing": "3.4 m", "superimposed": "1.4 kPa", "cover": "40 mm",
+        "stirrup_legs": 4, "loads": [{"type": "D", "point": "26 kN", "at": "0.0 m", "span": 1}],
+    },
     "two layers of top bars at an assumed restraint": {
         "spans": ["7.9 m", "7.8 m"], "supports": ["column 400 mm", "column 700 mm", "wall 400 mm"],
         "b_w": "300 mm", "h": "700 mm", "spacing": "5.6 m", "shape": "rectangular", "h_f": None,

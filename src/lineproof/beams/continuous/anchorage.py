@@ -282,6 +282,14 @@ def available(designed: Designed, support: int) -> float:
     )
 
 
+def hook_leg_fits(designed: Designed, support: int, size: str) -> bool:
+    """Tell whether the leg of a hook has room in the depth at an end of the beam."""
+    outline = designed.outline
+    depth = outline.depths[0 if support == 1 else -1]
+    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
+    return hook_leg(size, WIDEST_BENDS) <= depth - 2 * (outline.cover + d_bs)
+
+
 def hook_part(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> float:
     """Return the part of the strength of bars that their hooks develop at the inner face.
 
@@ -290,10 +298,7 @@ def hook_part(designed: Designed, support: int, size: str, *, spread: bool | Non
     """
     if not has_hooks(designed):
         return 0.0
-    outline = designed.outline
-    depth = outline.depths[0 if support == 1 else -1]
-    d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
-    if hook_leg(size, WIDEST_BENDS) > depth - 2 * (outline.cover + d_bs):
+    if not hook_leg_fits(designed, support, size):
         return 0.0
     l_av = available(designed, support)
     if not holds(hooks.FITS, d_b=BARS.number(size, "d_b"), l_av=l_av):

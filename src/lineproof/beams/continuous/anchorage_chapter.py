@@ -21,7 +21,12 @@ def record_anchorage(design: Design) -> None:
     """Record development, hooks, cut-off points, laps and coverage of the bars as laid."""
     coverage = record_detailing(_writers(design), design.runs)
     if not coverage.holds and not design.model.inputs.bars_given:  # bars given fail their checks
-        raise UserError([f"bars: {gap}" for gap in coverage.gaps])
+        raise UserError(
+            [
+                f"bars: {gap}; write a deeper or wider beam, or the bars themselves as bar_runs"
+                for gap in coverage.gaps
+            ]
+        )
 
 
 def record_ends(design: Design) -> None:

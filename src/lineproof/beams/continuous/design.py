@@ -25,7 +25,7 @@ from lineproof.beams.continuous.design_torsion import (
     more,
     torsion_forces,
 )
-from lineproof.beams.continuous.detailing import hook_ties, lay_bars
+from lineproof.beams.continuous.detailing import beside_ties, hook_ties, lay_bars
 from lineproof.beams.continuous.detailing_data import (
     Basis,
     Designed,
@@ -90,7 +90,7 @@ class Design:
     @property
     def detailing(self) -> Detailing:
         """Bars and stirrups, skin bars and the ties around hooks included."""
-        ties = hook_ties(self.designed, self.runs)
+        ties = hook_ties(self.designed, self.runs, self.stirrups.zones)
         return Detailing((*self.runs, *self._skin), (*self.stirrups.zones, *ties))
 
     @property
@@ -207,6 +207,7 @@ def _designed(
     if before is not None:
         designed = replace(before.designed, bars=bars, torsion={})
     designed, laid, choice = _laid(model, designed, runs)
+    choice = replace(choice, zones=beside_ties(designed, laid, choice.zones))
     return Design(model, pair, bottom, top, designed, laid, choice)
 
 

@@ -17,6 +17,7 @@ from lineproof.beams.choice import SIZES
 from lineproof.beams.continuous.anchorage import hook_part
 from lineproof.beams.continuous.detailing_bottom import SIDES, face_demand, face_tension
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
+from lineproof.beams.continuous.detailing_tips import tip_lacks
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance import Standing, yield_force
 from lineproof.beams.continuous.shear_check import SpanCheck
@@ -173,7 +174,7 @@ def more(
             least = area if area > before else before * MORE_ANCHORED
             least = max(least, made.anchored.get(span, 0.0))
             made = replace(made, anchored={**made.anchored, span: least})
-    for support, area in top_end_lacks(designed, standing):
+    for support, area in (*top_end_lacks(designed, standing), *tip_lacks(designed, standing)):
         if support in free.supports:
             made = _with_top(made, support, area)
     return None if made == asked else made

@@ -44,6 +44,7 @@ from lineproof.beams.continuous.detailing_meeting import (
     to_the_end,
     with_restraint,
 )
+from lineproof.beams.continuous.detailing_tips import with_tip_hooks
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun
@@ -103,7 +104,8 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
     others = others_through(designed, rows)
     string = joined(designed, with_holders(designed, corners))
     middles = [_middle(designed, span) for span in spans]
-    return tuple(p for run in (*string, *others) for p in split(designed, run, middles))
+    laid = (p for run in (*string, *others) for p in split(designed, run, middles))
+    return with_tip_hooks(frame, tuple(laid))
 
 
 def _fill(frame: Frame, span: int, reaches: dict[int, dict[End, Reach]]) -> None:

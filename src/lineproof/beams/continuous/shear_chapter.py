@@ -56,6 +56,7 @@ AT_GIRDER = (
     "Where a girder carries the beam from the side, the bars carry moment and shear together at "
     "its face."
 )
+AT_TIP = "So they do near a free end, as far as they are developed there."
 _SAME = 1e-9
 THROUGH = (
     "Torsion counts: all bottom bars of the web run from support to support, the top bars reach as "
@@ -87,7 +88,9 @@ def record_shear(design: Design) -> None:
         ties = [zone for zone in design.detailing.stirrups if zone.around_hooks]
         alike = record_stirrups(Steps(sheet, {}), choice, design.outline, ties)
         if design.raised and not design.designed.torsion:
+            tips = any(not design.designed.held(n) for n in (1, model.spans + 1))
             text = f"{MORE_BARS.format('; '.join(design.raised))} {AT_GIRDER}"
+            text = f"{text} {AT_TIP}" if tips else text
             sheet.note("more-bars", text, title="Bars along the beam", clause="11.3.9")
     torsion = _record_torsion(design, alike)
     record_support_torques(model, next(iter(torsion.values()), {}))

@@ -20,9 +20,9 @@ _FIRST = (
     "alone would carry the shear."
 )
 _TIES = (
-    "The ties around the hooks in the end supports are no stirrups for shear; 12.5.4 asks them to "
-    "stand closer. Between them the least clear distance is that of bars; it is checked with the "
-    "hooks."
+    "The ties around the hooks where the beam ends are no stirrups for shear; 12.5.4 asks them to "
+    "stand closer. At a free end they take the place of the stirrups there. Between them the least "
+    "clear distance is that of bars; it is checked with the hooks."
 )
 _GIVEN = "The stirrups are as given and checked as they stand."
 _STATIONS = (
