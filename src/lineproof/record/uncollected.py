@@ -11,7 +11,8 @@ from contextlib import contextmanager
 def uncollected() -> Iterator[None]:
     """Let the collector of cycles wait: it would walk over a record that grows, again and again.
 
-    What is not part of a cycle is freed as ever. Inside another such block nothing changes.
+    What is not part of a cycle is freed as ever. Inside another such block nothing changes. What
+    was made counts as old at the end: the next young collection would walk over all of it.
     """
     if not gc.isenabled():
         yield
@@ -20,4 +21,7 @@ def uncollected() -> Iterator[None]:
     try:
         yield
     finally:
+        if not gc.get_freeze_count():  # else somebody keeps things frozen on purpose
+            gc.freeze()
+            gc.unfreeze()
         gc.enable()
