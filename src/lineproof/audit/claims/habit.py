@@ -13,7 +13,7 @@ from decimal import Decimal
 
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, is_set_out, last_digit
 from lineproof.audit.claims.worlds import Worlds
-from lineproof.audit.data import Claim, Interval
+from lineproof.audit.data import Claim
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.scope import stem
 from lineproof.quantity.units import UNITS, internal_factor
@@ -95,8 +95,7 @@ def numbers_of(graph: Graph, claims: Iterable[Claim], worlds: Worlds) -> tuple[N
 
 
 def _number(node: Node, claim: Claim, worlds: Worlds) -> Number:
-    around = [w.follows[claim.id].interval for w in (worlds.claimed, worlds.sound)]
-    around.append(Interval(node.stored, node.stored))
+    around = worlds.around(node)
     follows = any(claim.stands_for.holds(interval.middle) for interval in around)
     read = [] if follows else [r for r in coarse_roundings(claim, node.symbol, around) if r.usual]
     size = round(claim.value)

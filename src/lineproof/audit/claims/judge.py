@@ -256,7 +256,7 @@ class _Judge:
             note = f"with {self._named(others)} it makes the right {self._named([total])}"
             note = f"{note}: another division of the same sum"
             return replace(made, verdict=Verdict.OTHER_METHOD, note=note)
-        around = self._around(node)
+        around = self.worlds.around(node)
         slip = unit_slip(claim, around)
         if slip is not None:
             return replace(made, verdict=Verdict.UNIT, note=slip.sentence, slips=(slip,))
@@ -351,14 +351,8 @@ class _Judge:
             if claim is None or not (node := self.graph[entry_id]).is_computed:
                 self.alone[entry_id] = False
             else:
-                self.alone[entry_id] = stands_alone(claim, node.symbol, self._around(node))
+                self.alone[entry_id] = stands_alone(claim, node.symbol, self.worlds.around(node))
         return self.alone[entry_id]
-
-    def _around(self, node: Node) -> list[Interval]:
-        """Return what a line may be: from the values claimed, put right, and as recorded."""
-        right = self.graph.stored[node.id]  # as a spreadsheet shows it, with all digits inside
-        worlds = self.worlds.claimed, self.worlds.sound
-        return [*(w.follows[node.id].interval for w in worlds), Interval(right, right)]
 
     # -- what later lines carry ------------------------------------------------------------
 

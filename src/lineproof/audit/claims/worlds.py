@@ -6,7 +6,7 @@ from collections.abc import Container, Iterable, Mapping
 from dataclasses import dataclass
 
 from lineproof.audit.claims.propagate import World
-from lineproof.audit.data import Claim
+from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph, Node
 
 
@@ -17,6 +17,12 @@ class Worlds:
     claimed: World
     sound: World
     twin: World
+
+    def around(self, node: Node) -> list[Interval]:
+        """Return what a line may be: from the values claimed, put right, and as recorded."""
+        follows = [w.follows[node.id].interval for w in (self.claimed, self.sound)]
+        # As recorded too: a spreadsheet shows rounded numbers and works with all their digits.
+        return [*follows, Interval(node.stored, node.stored)]
 
 
 def unmoved_lines(
