@@ -12,7 +12,7 @@ ROOMS = (
     "quantity", "formula", "record", "drawing", "sheet", "standards", "beams", "typeset",
     "package", "audit", "notebook", "cli",
 )  # fmt: skip
-FREE = ("errors", "resources")
+FREE = ("errors", "resources", "sentences")
 """Modules without dependencies, open to every room."""
 FACADE = ("__init__", "__main__")
 """What stands above all rooms: the names a notebook uses, and ``python -m lineproof``."""

@@ -32,7 +32,7 @@ function readCalcs() {
 function lineOf(calc, entry) {
   return {
     calc, id: entry.id, kind: entry.kind, digest: entry.digest, label: entry.label || "",
-    title: capital(entry.title || entry.symbol), needed: TO_CHECK.has(entry.kind),
+    title: begun(entry.title || entry.symbol), needed: TO_CHECK.has(entry.kind),
     about: TAKEN.has(entry.kind) ? "assumption" : "arithmetic",
     fails: entry.kind === "check" && !entry.holds,
     args: [...new Set(Object.values(entry.args ?? {}))], users: [], repeats: [], element: null,
@@ -40,9 +40,13 @@ function lineOf(calc, entry) {
 }
 
 // As on the page: a title begins with a capital, unless it begins with a symbol.
-function capital(title) {
-  const [first] = title.split(" ");
-  return /^\p{L}{2,}[,;:]?$/u.test(first) ? title[0].toUpperCase() + title.slice(1) : title;
+const WORD = /^[a-zà-öø-ÿœ]{2,}(?:[-'’][a-zà-öø-ÿœ]+)*[,:;.]?(?=\s|$)/;
+const ARTICLE = /^a (?!is\b|has\b|stands\b)[a-zà-öø-ÿœ]{2,}/;
+const SYMBOL = /^(?:alpha|beta|gamma|delta|eps|theta|lambda|phi|rho|sigma|mu|kd)\b/;
+
+function begun(title) {
+  const isWord = WORD.test(title) && !SYMBOL.test(title);
+  return isWord || ARTICLE.test(title) ? title[0].toUpperCase() + title.slice(1) : title;
 }
 
 // Ties lines to their places on the page; gives those that are read one by one, in their order.

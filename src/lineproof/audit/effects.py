@@ -11,6 +11,7 @@ import lineproof.beams  # noqa: F401 - registers the procedures of found values
 from lineproof.audit.data import Effect
 from lineproof.audit.graph import Graph, Node, Truth
 from lineproof.record.entry import DECISION
+from lineproof.sentences import begun
 
 UNSEEN = 0.0005
 """A change of utilisation up to this is none: it would print as the same number."""
@@ -113,7 +114,7 @@ def turned_sentence(graph: Graph, changed: Mapping[str, float], told: Told = CLA
     said += [f"and {more} more"] if more > 0 else []
     what = "a decision" if len(turned) == 1 else f"{len(turned)} decisions"
     return (
-        f"{told.changed.capitalize()}, {what} of the calc would turn: {'; '.join(said)}. "
+        f"{begun(told.changed)}, {what} of the calc would turn: {'; '.join(said)}. "
         "Effects are told along the recorded branch only; the lines of the other are not in the "
         "calc."
     )

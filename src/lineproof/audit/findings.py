@@ -9,7 +9,7 @@ from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdi
 from lineproof.audit.effects import effects_of, named_line, turned_sentence
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.search import none_fits
-from lineproof.typeset.sentences import begun
+from lineproof.sentences import begun
 from lineproof.typeset.values import told
 
 SOURCE = "claims"

@@ -29,8 +29,8 @@ from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
 from lineproof.package.words import AUDIT_REPORT
 from lineproof.record import Record
+from lineproof.sentences import begun
 from lineproof.sheet import Sheet
-from lineproof.typeset.sentences import begun
 from lineproof.typeset.values import number_text, unit_text
 
 MOST_EFFECTS = 12

@@ -10,8 +10,8 @@ from lineproof.audit.data import Audit, Effect, Finding, Judged, Severity, Slip,
 from lineproof.audit.findings import as_typed, cited, shown
 from lineproof.audit.graph import Graph, Node
 from lineproof.quantity.units import internal_factor
+from lineproof.sentences import begun
 from lineproof.typeset import printable
-from lineproof.typeset.sentences import begun
 
 MOST_EFFECTS = 5
 MOST_SLIPS = 3

@@ -20,6 +20,7 @@ from lineproof.package.layout import cut, fitted, fitted_result, whole, working_
 from lineproof.package.prose import Prose, prose_html, prose_tree
 from lineproof.package.row_heights import row_heights, table_heights
 from lineproof.resources import folder
+from lineproof.sentences import begun
 from lineproof.typeset.glyphs import bound, printable
 from lineproof.typeset.mathml import mathml
 from lineproof.typeset.nodes import (
@@ -220,7 +221,7 @@ def _filters() -> dict[str, Any]:
         "working_lines": working_lines,
         "fitted_result": fitted_result,
         "cut": cut,
-        "sentence": lambda text: text[:1].upper() + text[1:],
+        "begun": begun,
         "yes_no": lambda truth: "yes" if truth else "no",
         "verdict": _verdict,
         "checks_text": _checks_text,

@@ -26,6 +26,7 @@ from lineproof.record.entry import (
 from lineproof.record.plain_data import check_plain
 from lineproof.record.printing import Printer, utilisation
 from lineproof.record.seal import SEAL, seal_of
+from lineproof.sentences import begun
 
 SCHEMA = 1
 EARLIER_EDITION = "an earlier edition"
@@ -310,7 +311,7 @@ def _to_confirm(
             row = rows.setdefault(clause, empty)
             # What says more than "from memory" is the reason to look the clause up.
             row["basis"] = max(row["basis"], basis, key=len)
-            title = entry["title"][:1].upper() + entry["title"][1:]
+            title = begun(entry["title"])
             if title not in row["what"].split("; "):
                 row["what"] = f"{row['what']}; {title}" if row["what"] else title
             row["lines"].append(entry["id"])

@@ -13,6 +13,7 @@ from typing import Any
 from lineproof.formula import FROM_MEMORY
 from lineproof.formula.notation import Notation, Symbol
 from lineproof.quantity.units import UNITS
+from lineproof.sentences import begun
 from lineproof.typeset.chains import Chain, criterion_chains, line_chain
 from lineproof.typeset.nodes import EQUALS, Math, Word, row
 from lineproof.typeset.plain import plain
@@ -139,7 +140,7 @@ def printed_row(
         id=entry["id"],
         kind=entry["kind"],
         label=entry.get("label", ""),
-        title=_sentence_case(entry.get("title") or _meaning(entry, notation)),
+        title=begun(entry.get("title") or _meaning(entry, notation)),
         clause=entry.get("clause", ""),
         remarks=tuple(own.pop("remarks", ())),
         basis=_basis(entry),
@@ -153,12 +154,6 @@ def _meaning(entry: Entry, notation: Notation) -> str:
     """Return what a symbol means, for an entry without a title of its own."""
     symbol = notation.get(entry.get("symbol", ""))
     return symbol.meaning if symbol is not None else ""
-
-
-def _sentence_case(title: str) -> str:
-    """Begin a title with a capital, unless it begins with a symbol or a mark ("d", "10M")."""
-    first = title.partition(" ")[0].rstrip(",:;")
-    return title[0].upper() + title[1:] if first.isalpha() and len(first) > 1 else title
 
 
 def _origins(

@@ -10,7 +10,7 @@ from lineproof.audit.review.data import Raised, Review, Reviewer
 from lineproof.audit.review.marks import snapshot
 from lineproof.audit.review.merge import merge
 from lineproof.record import Record
-from lineproof.typeset.sentences import begun
+from lineproof.sentences import begun
 
 MOST_EFFECTS = 3
 """Effects told with a finding; the audit report tells them all."""

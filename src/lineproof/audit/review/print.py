@@ -15,7 +15,7 @@ from lineproof.package.reviewed import (
     PrintedStale,
 )
 from lineproof.record import Record
-from lineproof.typeset.sentences import begun
+from lineproof.sentences import begun
 
 MOST_LINES = 60
 """Lines that a change has made stale are named up to here; of more only the number is told."""

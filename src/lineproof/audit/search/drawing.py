@@ -31,6 +31,7 @@ from lineproof.audit.search.member import project_rows
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo, read_quantity
 from lineproof.record import Record
+from lineproof.sentences import begun
 from lineproof.standards.a23_3.bars import BARS
 
 SOURCE = "drawing"
@@ -251,8 +252,7 @@ def _compared(graph: Graph, item: Item, drawn: Drawn) -> Iterator[Finding]:
     yield Finding(
         SOURCE,
         severity,
-        f"{item.name.capitalize()}{place}: drawn {drawn.text}, {item.text} in the calc"
-        f"{_where(drawn)}.",
+        f"{begun(item.name)}{place}: drawn {drawn.text}, {item.text} in the calc{_where(drawn)}.",
         item.ids,
         CLAUSES.get(item.name, _SECTION),
         _advice(item, graph, changes, harmless=severity == Severity.OBSERVATION),
@@ -293,8 +293,7 @@ def _extra(drawn: Drawn) -> Finding:
     return Finding(
         SOURCE,
         Severity.MINOR,
-        f"{drawn.item.capitalize()}, {drawn.place}: drawn {drawn.text}, not in the calc"
-        f"{_where(drawn)}.",
+        f"{begun(drawn.item)}, {drawn.place}: drawn {drawn.text}, not in the calc{_where(drawn)}.",
         clause=CLAUSES.get(drawn.item, _SECTION),
         advice="Ask what they are for: bars that the calc does not count may hinder the concrete.",
     )
@@ -312,7 +311,7 @@ def _not_drawn(items: Iterable[Item]) -> Iterator[Finding]:
         yield Finding(
             SOURCE,
             Severity.MAJOR if steel else Severity.MINOR,
-            f"{name.capitalize()}{where}: not on the drawing.",
+            f"{begun(name)}{where}: not on the drawing.",
             tuple(dict.fromkeys(entry_id for item in left for entry_id in item.ids)),
             CLAUSES.get(name, _SECTION),
             advice="See whether the drawing shows it, and fill in the row.",

@@ -16,6 +16,7 @@ from lineproof.errors import UserError
 from lineproof.formula import Criterion
 from lineproof.formula.compiled import ROUND_OFF
 from lineproof.record.printing import ratio
+from lineproof.sentences import begun
 from lineproof.standards.a23_3.bars import BARS
 
 Utilisation = Callable[[Mapping[str, float]], float]
@@ -176,7 +177,7 @@ they are. No concrete up to 80 MPa would do.'
     """
     able = [cure.text for cure in found if cure.value is not None]
     unable = [cure.text for cure in found if cure.value is None]
-    none = f"{_sentence_case(_joined(unable))} would do" if unable else ""
+    none = f"{begun(_joined(unable))} would do" if unable else ""
     if not able:
         return f"{none} alone." if none else ""
     others = "all else and the loads, self weight too, as they are"
@@ -201,10 +202,6 @@ def _joined(texts: Sequence[str]) -> str:
     if len(texts) == 1:
         return texts[0]
     return f"{', '.join(texts[:-1])} and {texts[-1]}"
-
-
-def _sentence_case(text: str) -> str:
-    return text[:1].upper() + text[1:]
 
 
 def _cure(utilisation: Utilisation, symbol: str, variable: Variable) -> Cure:

@@ -35,6 +35,7 @@ from lineproof.beams.continuous.summary_tables import Row, ratio_text
 from lineproof.errors import UserError
 from lineproof.record import Entry, Part
 from lineproof.record.printing import utilisation
+from lineproof.sentences import begun
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 from lineproof.standards.a23_3 import shear, shear_factors
@@ -159,8 +160,7 @@ def failing_rows(design: Design, found: Found) -> Iterator[Row]:
         for cure, checks in rows.items():
             worst = max(checks, key=lambda check: utilisation(check) or math.inf)
             titles = "; ".join(_title(check) for check in checks)
-            titles = titles[:1].upper() + titles[1:]
-            yield Row((part.title, titles, ratio_text(worst), cure), worst)
+            yield Row((part.title, begun(titles), ratio_text(worst), cure), worst)
 
 
 def _leads(part: Part) -> bool:

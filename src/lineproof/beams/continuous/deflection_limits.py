@@ -11,6 +11,7 @@ from lineproof.beams.continuous.deflection_local import LocalLoad, points_at
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, Criterion
 from lineproof.record import Entry, Procedure
+from lineproof.sentences import begun
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
 
@@ -60,7 +61,7 @@ def record_limits(
     cantilever = row.endswith("cantilever")
     sheet.note("carries", f"The span carries: {carries}.", title="Limit of Table 9.3")
     if arrangement:
-        sheet.note("arrangement", _sentence(arrangement), title="Live load")
+        sheet.note("arrangement", f"{begun(arrangement.rstrip('.'))}.", title="Live load")
     sheet.note("place", _ROOT if cantilever else _MIDSPAN, title="Place")
     words = {"attached": _time(history.attached), "final": history.final}
     sheet.note("history", _HISTORY.format(**words), title="History of loading")
@@ -85,10 +86,6 @@ def _record_rise(steps: Steps, lifting: str, *, by_live: bool) -> Entry | None:
         return None
     steps.line(stages.RISE if by_live else stages.RISE_ATTACHED)
     return steps.check(stages.RISE_SMALL)
-
-
-def _sentence(words: str) -> str:
-    return f"{words[0].upper()}{words[1:].rstrip('.')}."
 
 
 def _time(row: str) -> str:

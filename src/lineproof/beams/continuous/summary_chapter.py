@@ -58,6 +58,7 @@ from lineproof.beams.continuous.symbols import KINDS
 from lineproof.drawing import Figure, to_json
 from lineproof.record import Entry
 from lineproof.record.entry import GIVEN, VALUES
+from lineproof.sentences import begun
 from lineproof.sheet import Sheet
 
 SUMMARY = "summary"
@@ -160,7 +161,7 @@ def _title(entry: Entry) -> str:
     """Return the title of a load; of one that is typed in also its type and span."""
     title = str((entry.extra or {}).get("title") or entry.source.title)
     where = f": {entry.source.origin}" if entry.kind == GIVEN else ""
-    return f"{title[0].upper()}{title[1:]}{where}"
+    return f"{begun(title)}{where}"
 
 
 def _figure(sheet: Sheet, key: str, figure: Figure, front: int, rests: Iterable[Entry]) -> None:

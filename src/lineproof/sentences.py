@@ -4,19 +4,24 @@ from __future__ import annotations
 
 import re
 
-_WORD = re.compile(r"[a-z]{2,}(?:[-'’][a-z]+)*[,:;.]?(?=\s|\Z)")
-"""A word of plain English. ``d``, ``k_3``, ``λ``, ``f'c`` and ``sag-1/d`` are none."""
-_ARTICLE = re.compile(r"a (?!is\b|has\b|stands\b)[a-z]{2,}")
+_LETTER = "[a-zà-öø-ÿœ]"
+_WORD = re.compile(rf"{_LETTER}{{2,}}(?:[-'’]{_LETTER}+)*[,:;.]?(?=\s|\Z)")
+"""A plain word, of a user too. ``d``, ``k_3``, ``λ``, ``f'c`` and ``sag-1/d`` are none."""
+_ARTICLE = re.compile(rf"a (?!is\b|has\b|stands\b){_LETTER}{{2,}}")
 _SYMBOLS = re.compile(r"(?:alpha|beta|gamma|delta|eps|theta|lambda|phi|rho|sigma|mu|kd)\b")
 
 
 def begun(text: str) -> str:
     """Return a text that begins with a capital letter, unless it begins with a symbol.
 
+    The review page does the same to titles: ``begun`` in its ``lines.js``.
+
     >>> begun("write phi_c in its place"), begun("d = 540 mm is typed"), begun("λ is left out")
     ('Write phi_c in its place', 'd = 540 mm is typed', 'λ is left out')
     >>> begun("a section has no bars"), begun("a is the depth of the block")
     ('A section has no bars', 'a is the depth of the block')
+    >>> begun("l/480 under live load"), begun("as-built depth"), begun("épaisseur de la dalle")
+    ('l/480 under live load', 'As-built depth', 'Épaisseur de la dalle')
     """
     is_word = _WORD.match(text) is not None and _SYMBOLS.match(text) is None
     return f"{text[:1].upper()}{text[1:]}" if is_word or _ARTICLE.match(text) else text
