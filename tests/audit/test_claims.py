@@ -7,6 +7,7 @@ from pathlib import Path
 import pytest
 from tests.audit.hand import beam, sheet_of
 
+from lineproof.audit.audit import audit_claims
 from lineproof.audit.claims.blank import blank_table
 from lineproof.audit.claims.read import read_claims
 from lineproof.audit.claims.tables import read_table, write_table
@@ -169,3 +170,37 @@ def test_a_blank_filled_in_reads_as_claims(graph: Graph, tmp_path: Path, ending:
     filled = tmp_path / f"filled{ending}"
     filled.write_bytes(write_table(table.headings, rows, ending))
     assert {c.id: c.typed for c in read_claims(graph, filled)} == values
+
+
+def test_bars_claimed_for_their_area_are_read_by_the_bar_table(
+    graph: Graph, tmp_path: Path
+) -> None:
+    """20M has 300 mm2, 25M 500 mm2 (CSA G30.18): 4 x 300 = 1200, 2 x 300 + 2 x 500 = 1600."""
+    table = "id,claimed,unit\nbeam/A_s,{},mm2\n"
+    (claim,) = read(graph, tmp_path, table.format("4-20M"))
+    assert (claim.typed, claim.unit, claim.bars) == ("1200", "mm2", "4-20M")
+    (claim,) = read(graph, tmp_path, table.format("2 x 20m + 2–25M"))
+    assert (claim.value, claim.bars) == (1600.0, "2 x 20m + 2–25M")
+    audit = audit_claims(graph.record, read(graph, tmp_path, table.format("3-20M")), graph)
+    assert audit.notes == (
+        "Bars are read as their area by the bar table (CSA G30.18): A_s (2.2) 3-20M as 900 mm².",
+    )
+    assert "900 mm² (3-20M) does not follow" in audit.findings[0].what
+
+
+def test_bars_are_no_area_that_a_moment_requires(tmp_path: Path) -> None:
+    """A_sr = M_f/(phi_s f_y 0.9 d) is worked out; 4-20M is what was chosen for it."""
+    lines = {"A_sr = M_f/(phi_s*f_y*0.9*d)": "mm2"}
+    given = {"M_f": "180 kN.m", "phi_s": "0.85", "f_y": "400 MPa", "d": "540 mm", "n_b": "4"}
+    graph = Graph(sheet_of(lines, given).close())
+    said = faults(graph, tmp_path, "id,claimed\nbeam/A_sr,4-20M\ngiven/n_b,4-20M\n")
+    other = "'4-20M' names bars, and this line is no area of whole bars; write it as a number"
+    assert said == (
+        f"row 2, claimed: A_sr: {other}, such as '25 mm2'",
+        f"row 3, claimed: n_b: {other}, such as '4'",
+    )
+
+
+def test_bars_of_a_size_that_there_is_not(graph: Graph, tmp_path: Path) -> None:
+    (said,) = faults(graph, tmp_path, "id,claimed\nbeam/A_s,4-22M\n")
+    assert said.startswith("row 2, claimed: A_s: '22M' is not a Canadian bar")

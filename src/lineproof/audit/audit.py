@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterable, Sequence
 
 import numpy as np
 
+from lineproof.audit.claims.bars import bars_note
 from lineproof.audit.claims.conventions import convention_of
 from lineproof.audit.claims.judge import judge
 from lineproof.audit.data import Audit, Claim, Finding
@@ -34,7 +35,8 @@ def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = 
     with np.errstate(all="ignore"):  # absurd claims lead procedures to infinities: no value
         convention = convention_of(graph, claims)
         judged = judge(graph, claims, searching(), convention)
-        notes = (convention.sentence,) if convention.ids else ()
+        said = (convention.sentence if convention.ids else "", bars_note(graph, claims))
+        notes = tuple(filter(None, said))
         return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged), notes)
 
 

@@ -76,7 +76,8 @@ class Claim:
 
     A moment claimed in another sign convention has the calc's own sign in both numbers.
     ``row`` is its row in the table that it came from, counted as the spreadsheet shows it;
-    ``where`` is its place in the other's calculation as the table says: ``p. 3``.
+    ``where`` is its place in the other's calculation as the table says: ``p. 3``. ``bars`` are
+    those that were claimed for their area: ``4-20M``.
     """
 
     id: str
@@ -86,6 +87,13 @@ class Claim:
     stands_for: Interval
     row: int = 0
     where: str = ""
+    bars: str = ""
+
+    @property
+    def beside(self) -> str:
+        """What stands in brackets beside the number: the bars claimed, the place; or nothing."""
+        said = ", ".join(filter(None, (self.bars, self.where)))
+        return f" ({said})" if said else ""
 
 
 class Verdict(StrEnum):

@@ -147,8 +147,8 @@ def as_typed(claim: Claim) -> str:
 
 
 def cited(claim: Claim) -> str:
-    """Return a claimed number with its unit and, if told, its place in the other's calculation."""
-    return f"{as_typed(claim)} ({claim.where})" if claim.where else as_typed(claim)
+    """Return a claimed number with its unit, its bars, and its place in the other's calculation."""
+    return f"{as_typed(claim)}{claim.beside}"
 
 
 def shown(node: Node, value: float) -> str:

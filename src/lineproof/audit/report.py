@@ -293,8 +293,7 @@ def _number(value: float, node: Node) -> str:
 
 
 def _claimed(claim: Claim) -> str:
-    typed = _with_unit(claim.typed, claim.unit)
-    return f"{typed} ({claim.where})" if claim.where else typed
+    return f"{_with_unit(claim.typed, claim.unit)}{claim.beside}"
 
 
 def _with_unit(number: str, unit: str) -> str:

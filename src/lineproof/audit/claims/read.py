@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from functools import cached_property
 from pathlib import Path
 
+from lineproof.audit.claims.bars import area_claimed, bars_in
 from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.claims.tables import MOST_FAULTS, Row, Table, TableFaults, read_with_faults
 from lineproof.audit.data import Claim, read_from
@@ -170,14 +171,18 @@ class _Reader:
             self.faults.at(row.number, "claimed", fault)
             return None
         unit = row.cells.get("unit", "") if _BARE.match(text) else ""
+        bars = text if bars_in(text) else ""
         try:
-            read = read_quantity(node.symbol, f"{text} {unit}".strip(), node.unit)
+            text = f"{area_claimed(self.graph, node, bars)} mm2" if bars else f"{text} {unit}"
+            read = read_quantity(node.symbol, text.strip(), node.unit)
         except UserError as error:
             self.faults.at(row.number, "claimed", error.faults[0])
             return None
         stands_for = read_from(read.number).times(internal_factor(read.unit))
         where = " ".join(row.cells.get("where", "").split())[:_LONGEST_WHERE]
-        return Claim(node.id, read.number, read.unit, read.value, stands_for, row.number, where)
+        return Claim(
+            node.id, read.number, read.unit, read.value, stands_for, row.number, where, bars
+        )
 
 
 def _words(text: str) -> list[str]:

@@ -1,0 +1,78 @@
+"""Bars claimed where an area is asked: ``4-20M`` is 1200 mm2 by the bar table, and is noted."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable
+from decimal import Decimal
+
+from lineproof.audit.data import Claim
+from lineproof.audit.graph import Graph, Node
+from lineproof.errors import UserError
+from lineproof.formula.tree import Binary, Name
+from lineproof.quantity import echo
+from lineproof.quantity.units import UNITS
+from lineproof.record.entry import GIVEN
+from lineproof.standards.a23_3.bars import AREA_OF_BARS, BARS
+from lineproof.typeset.values import told
+
+_GROUP = re.compile(r"(\d{1,3}) ?[-–x×] ?(\d{2}M)\Z", re.ASCII | re.IGNORECASE)
+_BETWEEN = re.compile(r" ?(?:[+/]|\band\b) ?")
+_GIVEN_AREAS = ("A_s", "A_sp")
+"""Areas of bars that a calculation of a section may take as given: in tension, in compression."""
+
+
+def bars_in(text: str) -> tuple[tuple[int, str], ...]:
+    """Return number and size of the bars that a text names; empty where it names none.
+
+    >>> bars_in("4-20M"), bars_in("2 x 25m + 2-20M"), bars_in("1200 mm2")
+    (((4, '20M'),), ((2, '25M'), (2, '20M')), ())
+    """
+    found = [_GROUP.match(group) for group in _BETWEEN.split(text)]
+    if not all(found):
+        return ()
+    return tuple((int(match[1]), match[2].upper()) for match in found if match)
+
+
+def area_claimed(graph: Graph, node: Node, text: str) -> str:
+    """Return the area [mm2] of bars claimed for a line, as a number text.
+
+    The line must be the area of whole bars; that which a moment requires, or which counts as far
+    as it is developed, is another number. Raises :class:`UserError` with what to write.
+    """
+    if not _is_of_whole_bars(graph, node):
+        sample = f"25 {node.unit}" if node.unit else "4"
+        raise UserError(
+            f"{node.symbol}: {echo(text)} names bars, and this line is no area of whole bars; "
+            f"write it as a number, such as {sample!r}"
+        )
+    areas = [n * Decimal(BARS.row(size, node.symbol)["A_b"]) for n, size in bars_in(text)]
+    return f"{sum(areas)}"
+
+
+def _is_of_whole_bars(graph: Graph, node: Node) -> bool:
+    """Tell whether a line is a number of bars times the area of one, or a sum of such lines."""
+    if node.kind == GIVEN:
+        return node.symbol in _GIVEN_AREAS and UNITS[node.unit].kind == "area"
+    if node.tree == AREA_OF_BARS.tree:
+        return True
+    return _is_sum(node) and all(_is_of_whole_bars(graph, graph[i]) for i in node.args.values())
+
+
+def _is_sum(node: Node) -> bool:
+    match node.tree:
+        case Binary("+", Name(), Name()):
+            return True
+    return False
+
+
+def bars_note(graph: Graph, claims: Iterable[Claim]) -> str:
+    """Return the sentence on bars that were read as their area; nothing where none were."""
+    said = [
+        f"{graph[c.id].symbol} ({graph[c.id].label}) {c.bars} as {told(c.typed, c.unit)}"
+        for c in claims
+        if c.bars
+    ]
+    if not said:
+        return ""
+    return f"Bars are read as their area by the bar table (CSA G30.18): {', '.join(said)}."
