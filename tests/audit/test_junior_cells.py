@@ -323,6 +323,39 @@ def test_code_that_says_otherwise_than_the_record(source: str, words: str, recor
     assert bool(found) is bool(words)
 
 
+OTHER_LINE = 'sheet.line("A_s = 2*n_b*A_b", unit="mm2")'
+
+
+@pytest.mark.parametrize(
+    ("source", "severity", "words"),
+    [
+        (f"if False:\n    {OTHER_LINE}", Severity.OBSERVATION, "in a branch that never runs"),
+        (f"if not 1:\n    pass\nelif 0:\n    {OTHER_LINE}", Severity.OBSERVATION, "never runs"),
+        (f"while 0:\n    {OTHER_LINE}", Severity.OBSERVATION, "never runs"),
+        (f"if True:\n    pass\nelse:\n    for i in n:\n        {OTHER_LINE}",
+         Severity.OBSERVATION, "never runs"),
+        (f"if deep:\n    {OTHER_LINE}", Severity.MINOR, "in a branch that was not run, or was"),
+        (f"try:\n    pass\nexcept ValueError:\n    {OTHER_LINE}", Severity.MINOR, "a branch that"),
+        (f"for i in n:\n    {OTHER_LINE}", Severity.MAJOR, "in a loop that was not run"),
+        (f"def area():\n    {OTHER_LINE}", Severity.MAJOR, "in a function that was not called"),
+        (f"if True:\n    {OTHER_LINE}", Severity.MAJOR, "which is not in the record"),
+    ],
+)  # fmt: skip
+def test_a_line_that_is_not_recorded_says_when_its_code_runs(
+    source: str, severity: Severity, words: str, record: Record
+) -> None:
+    (found,) = findings(source, record)
+    assert (found.severity, words in found.what) == (severity, True)
+
+
+def test_a_part_that_never_opens_shows_nothing(record: Record) -> None:
+    """Its cell ran and left no output, and none was taken out."""
+    opens = 'with sheet.part("x", "X"):\n    pass'
+    never = f"if False:\n    {opens}".replace("\n    pass", "\n        pass")
+    assert said(findings(opens, record), "they were taken out")
+    assert findings(never, record) == ()
+
+
 # -- editions and head -----------------------------------------------------------------------
 
 

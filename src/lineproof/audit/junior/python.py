@@ -10,6 +10,7 @@ from dataclasses import dataclass, field
 
 from lineproof.audit.junior.arithmetic import last_name, symbol_of, tree_of
 from lineproof.audit.junior.cells import CODE, LONGEST_CELL, Cell
+from lineproof.audit.junior.when import When, walked
 from lineproof.formula import Tree
 
 _MAGIC = re.compile(r"(\s*)(?:[%!?]|[\w.]+\?{1,2}\s*$)")
@@ -37,12 +38,16 @@ class Assigned:
 
 @dataclass(frozen=True, slots=True)
 class Recorded:
-    """A call that records into a sheet: its method, the texts given, those named by keyword."""
+    """A call that records into a sheet: its method, the texts given, those named by keyword.
+
+    ``when`` tells whether it is run with its cell.
+    """
 
     cell: Cell
     method: str
     texts: tuple[str, ...]
     named: dict[str, str] = field(default_factory=dict)
+    when: When = When.ALWAYS
 
 
 @dataclass(frozen=True, slots=True)
@@ -148,7 +153,7 @@ def recorded(code: Code) -> Iterator[Recorded]:
     """Give the calls that record into a sheet, with the texts that stand in them."""
     if code.tree is None:
         return
-    for node in ast.walk(code.tree):
+    for node, when in walked(code.tree):
         if not isinstance(node, ast.Call):
             continue
         method = last_name(node.func)
@@ -160,4 +165,4 @@ def recorded(code: Code) -> Iterator[Recorded]:
             }  # fmt: skip
             held = tuple(text for text in texts if isinstance(text, str))
             if held and len(texts) == len(node.args):
-                yield Recorded(code.cell, method, held, named)
+                yield Recorded(code.cell, method, held, named, when)

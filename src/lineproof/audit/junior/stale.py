@@ -14,12 +14,31 @@ from lineproof.audit.junior.cells import CODE, PARAMETERS, Cell
 from lineproof.audit.junior.code import cell_by_cell
 from lineproof.audit.junior.python import Code, Recorded, assigned, recorded
 from lineproof.audit.junior.scope import Scope, finding, listed, name_of
+from lineproof.audit.junior.when import When
 from lineproof.errors import UserError
 from lineproof.quantity import read_quantity
 from lineproof.record.entry import CRITERIA, GIVEN, LINE
 from lineproof.record.recompute import close
 
 RUN_ALL = "run all cells from the top, then save"
+_WHEN = {
+    When.ALWAYS: (Severity.MAJOR, "", RUN_ALL),
+    When.BRANCH: (
+        Severity.MINOR, ": it stands in a branch that was not run, or was changed since", RUN_ALL,
+    ),
+    When.LOOP: (
+        Severity.MAJOR, ": it stands in a loop that was not run, or was changed since", RUN_ALL,
+    ),
+    When.CALLED: (
+        Severity.MAJOR, ": it stands in a function that was not called, or was changed since",
+        RUN_ALL,
+    ),
+    When.NEVER: (
+        Severity.OBSERVATION, ": it stands in a branch that never runs",
+        "take it out, or let it run",
+    ),
+}  # fmt: skip
+"""What a line that the record does not hold means, by when its code is run."""
 INPUTS = {
     "cover": "c_c", "spacing": "s_b", "superimposed": "q_SD", "partitions": "q_pt",
     "live_load": "q_L", "tributary_width": "b_tr", "snow": "q_S", "aggregate": "a_max",
@@ -129,7 +148,7 @@ def _cleared(codes: Sequence[Code]) -> Iterator[Finding]:
 
 def _shows(code: Code) -> bool:
     body = code.tree.body if code.tree is not None else []
-    opens = any(made.method == "part" for made in recorded(code))
+    opens = any(m.method == "part" and m.when is When.ALWAYS for m in recorded(code))
     prints = any(
         isinstance(s, ast.Expr)
         and isinstance(s.value, ast.Call)
@@ -208,7 +227,8 @@ def _not_recorded(codes: Sequence[Code], scope: Scope) -> Iterator[Finding]:
     for made in (made for code in codes for made in recorded(code)):
         said = _missing(made, formulas, typed, scope.record.data["calc"])
         if said:
-            yield finding(Severity.MAJOR, f"{made.cell.name} {said}", advice=RUN_ALL)
+            severity, why, advice = _WHEN[made.when]
+            yield finding(severity, f"{made.cell.name} {said}{why}", advice=advice)
 
 
 def _missing(
