@@ -214,7 +214,7 @@ def test_a_notebook_alone_and_against_claims(
     assert "1 claim: 1 agrees" in capsys.readouterr().out
     assert audit(beam_file) == 1
     said = capsys.readouterr().out
-    assert "Shear resistance is not checked. [11.3.1]" in said
+    assert "Shear resistance: not checked. [11.3.1]" in said
     assert "changed" not in said
     assert beam_file.read_bytes() == before
 

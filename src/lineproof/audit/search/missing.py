@@ -167,29 +167,45 @@ def _missed(row: Expected, spots: Sequence[Spot]) -> Iterator[Finding]:
     first = row.tests[0]
     at = [name for name, ids in made.items() if ids]
     if row.where == Where.BEAM:
-        what = f"{first.title} is not checked"
+        said = "not checked"
     elif at:
         only = f"for {_list(at)} only" if len(at) <= _FEW else f"at {len(at)} places"
-        what = f"{first.title} is checked {only}, not for {_list(without)}"
+        said = f"checked {only}, not for {_list(without)}"
     else:
-        what = f"{first.title} is not checked anywhere; it belongs to {row.where.value}"
+        said = f"not checked anywhere; it is needed for {row.where.value}"
     yield Finding(
         SOURCE,
         row.severity,
-        f"{what}.",
+        f"{_named(first)}: {said}.",
         tuple(entry_id for ids in made.values() for entry_id in ids),
         first.clause,
-        f"Check {first.text} there, or list it on the cover as not covered.",
+        _advice(row),
     )
 
 
+def _named(test: Criterion) -> str:
+    """Return the title of a test; the colon behind it is the only one of its sentence."""
+    return test.title.replace(": ", ", ")
+
+
+def _advice(row: Expected) -> str:
+    first, *others = row.tests
+    there = "" if row.where == Where.BEAM else " there"
+    advice = f"Check {first.text}{there}, or list it on the cover as not covered."
+    titles = dict.fromkeys(map(_named, others))
+    return f"{advice} In its place counts: {'; '.join(titles)}." if titles else advice
+
+
 def _list(names: Sequence[str]) -> str:
-    """Join names as one says them.
+    """Join names as one says them; those that hold a comma are parted by more.
 
     >>> _list(["span 1", "span 2", "span 3"])
     'span 1, span 2 and span 3'
+    >>> _list(["support 2, left face", "support 3, left face"])
+    'support 2, left face; and support 3, left face'
     """
-    return " and ".join(filter(None, (", ".join(names[:-1]), names[-1])))
+    comma, last = ("; ", "; and ") if any("," in name for name in names) else (", ", " and ")
+    return last.join(filter(None, (comma.join(names[:-1]), names[-1])))
 
 
 def _told(record: Record, row: Expected) -> bool:
@@ -210,7 +226,7 @@ def _covers(clause: str, told: str) -> bool:
 
 
 _SERIES = re.compile(r"anchorage-(bar|lap)-(\d+)")
-_SERIES_NAMES = {"bar": "the development of bars, group", "lap": "lap"}
+_SERIES_NAMES = {"bar": "Development of bars, group", "lap": "Lap"}
 
 
 def _left_out(record: Record) -> Iterator[Finding]:
@@ -225,7 +241,7 @@ def _left_out(record: Record) -> Iterator[Finding]:
             yield Finding(
                 SOURCE,
                 MAJOR,
-                f"The part on {_SERIES_NAMES[name]} {number} is left out; later ones are there.",
+                f"{_SERIES_NAMES[name]} {number}: left out, though later ones are there.",
                 clause="12.15" if name == "lap" else "12.2",
                 advice="Ask for the part, or for the reason why it is not needed.",
             )
