@@ -169,7 +169,8 @@ def _factor(
 
 
 def _said(line: Line, at: int, said: str) -> str:
-    return said.format(line.text(at))
+    alone = said.startswith("{}") and isinstance(line.places.places[at].tree, Number)
+    return said.format(f"the number {line.text(at)}" if alone else line.text(at))
 
 
 def _sign(line: Line, at: int) -> str:
@@ -290,7 +291,7 @@ def _branches(line: Line, at: int, place: Place) -> Iterator[Edit]:
     pairs = [line.pair(k) for k in place.below]
     other = {"min": max, "max": min}[place.operation](pairs)
     swapped_words = ("largest", "least") if place.operation == "min" else ("least", "largest")
-    words = partial("the {} taken for the {}".format, *swapped_words)
+    words = partial("the {} of the values in place of the {}".format, *swapped_words)
     yield Edit("min for max", (at,), *other, words)
     for k in place.below:
         said = partial(_said, line, k, "the branch {} alone, the others forgotten")

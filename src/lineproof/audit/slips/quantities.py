@@ -9,8 +9,6 @@ from typing import NamedTuple
 from lineproof.audit.slips.edits import Edit, Line, words_of
 from lineproof.audit.slips.kinship import PAIRS, PARTNERS, SERVICE
 from lineproof.audit.slips.scope import is_next
-from lineproof.quantity.digits import rounded_text
-from lineproof.quantity.units import internal_factor
 from lineproof.typeset.values import told
 
 
@@ -35,10 +33,9 @@ class Other(NamedTuple):
 
 def shown(line: Line, entry_id: str, value: float | None = None) -> str:
     """Return a value in its printed unit: ``380 mm``."""
-    unit = line.scope.graph[entry_id].unit
+    node = line.scope.graph[entry_id]
     number = line.pairs[entry_id][0] if value is None else value
-    text = rounded_text(number / internal_factor(unit), 4) if number else "0"
-    return told(text, unit)
+    return told(node.number_text(number) if number else "0", node.unit)
 
 
 def _in_place(line: Line, other: str, target: str, name: str) -> str:

@@ -5,6 +5,8 @@ from __future__ import annotations
 import math
 from functools import cache
 
+from lineproof.typeset.values import unit_text
+
 INCH, KIP, KSI = 25.4, 4.4482216152605, 6.894757293168
 """An inch in mm, a kip in kN, a ksi in MPa: exact by definition, but for the last digits of KSI."""
 _USUAL: dict[str, tuple[tuple[float, str], ...]] = {
@@ -21,7 +23,6 @@ _USUAL: dict[str, tuple[tuple[float, str], ...]] = {
     "N/mm3": ((1e-3, "kN/m3 for N/m3"), (1e3, "N/m3 for kN/m3")),
     "N.mm2": ((1e-9, "kN.m2 for N.mm2"),),
     "deg": ((math.pi / 180, "radians for degrees"), (180 / math.pi, "degrees for radians")),
-    "": ((1e3, "a power of ten lost"), (1e-3, "a power of ten too much")),
 }  # fmt: skip
 _CUSTOMARY: dict[str, tuple[tuple[float, str], ...]] = {
     "mm": ((INCH, "mm for in"), (1 / INCH, "in for mm"), (12 * INCH, "mm for ft"),
@@ -34,24 +35,43 @@ _CUSTOMARY: dict[str, tuple[tuple[float, str], ...]] = {
             (1 / KSI, "ksi for MPa")),
 }  # fmt: skip
 _POWERS = (1e3, 1e-3, 1e6, 1e-6)
+_PLAIN = (1e3, 1e-3)
+"""Powers of ten by which a number without a unit is off, such as a strain per thousand."""
+_WORDS = {
+    "in": "inches", "ft": "feet", "in2": "square inches", "10^6 mm4": "10⁶ mm⁴",
+    "radians": "radians", "degrees": "degrees", "kip/ft": "kip/ft",
+}  # fmt: skip
 _NEAR = 1e-6
 
 
 @cache
 def ways_of_units(unit: str) -> tuple[tuple[float, str, str], ...]:
-    """Return the slips of units for an internal unit: factor, family, and what stood for what.
+    """Return the slips of units for an internal unit: factor, family, and what is said of it.
 
-    >>> ways_of_units("N")[0]
-    (0.001, 'unit', 'kN for N')
+    >>> ways_of_units("N")[0], ways_of_units("")[1]
+    ((0.001, 'unit', 'in kN taken as N'), (0.001, 'unit', '1000 times too small'))
     """
+    if not unit:
+        return tuple((factor, "unit", _times(factor)) for factor in _PLAIN)
     usual = _USUAL.get(unit, ())
     powers = [
-        (power, "other unit", f"off by 10^{round(math.log10(power))}")
-        for power in (_POWERS if unit and unit != "deg" else ())
+        (power, "other unit", _times(power))
+        for power in (_POWERS if unit != "deg" else ())
         if all(abs(power / factor - 1) > _NEAR for factor, _ in usual)
     ]
     return (
-        *((factor, "unit", why) for factor, why in usual),
-        *((factor, "other unit", why) for factor, why in _CUSTOMARY.get(unit, ())),
+        *((factor, "unit", _taken(units)) for factor, units in usual),
+        *((factor, "other unit", _taken(units)) for factor, units in _CUSTOMARY.get(unit, ())),
         *powers,
     )
+
+
+def _taken(units: str) -> str:
+    """Say of ``kN for N`` what was done."""
+    given, taken = (_WORDS.get(unit) or unit_text(unit) for unit in units.split(" for "))
+    return f"in {given} taken as {taken}"
+
+
+def _times(factor: float) -> str:
+    power = round(math.log10(factor))
+    return f"{10 ** abs(power)} times too {'large' if power > 0 else 'small'}"

@@ -126,7 +126,7 @@ def _tables(line: Line, target: str, name: str) -> Iterator[Other]:
     # beta_g and theta_g are beta and theta of the other method, f_yt the f_y of stirrups.
     key = symbol if symbol in BY_SYMBOL else name
     for new, source in BY_SYMBOL.get(key, ()):
-        said = partial(_changed, line, target, name, new, f" ({source})")
+        said = partial(_changed, line, target, name, new, "", f" ({source})")
         if not math.isclose(new, value):
             yield Other("edition", new, 0.0, said)
     for new in ROWS.get(symbol, ()):
@@ -170,10 +170,10 @@ def _units(line: Line, target: str, name: str) -> Iterator[Other]:
     for factor, family, why in ways_of_units(unit):
         if unit == "" and (is_count or abs(value) > LARGEST_STRAIN):
             continue
-        words = partial(_of, line, target, name, f"{{}} in the wrong unit: {why}")
+        words = partial(_of, line, target, name, f"{{}} {why}")
         yield Other(family, value * factor, half * factor, words)
     for factor in () if is_count or line.above else (10.0, 0.1):
-        words = partial(_of, line, target, name, "the decimal point of {} moved by one")
+        words = partial(_of, line, target, name, "the decimal point of {} moved by one place")
         yield Other("decimal", value * factor, half * factor, words)
 
 
@@ -206,9 +206,10 @@ def _mistyped(line: Line, target: str, name: str, typed: str, number: str) -> st
     return f"{words_of(line.scope, target, name)} typed as {typed} in place of {number}"
 
 
-def _changed(line: Line, target: str, name: str, value: float, why: str) -> str:
+def _changed(line: Line, target: str, name: str, value: float, why: str, source: str = "") -> str:
+    """Say what a value was changed to, whose that is, and how it came about."""
     return (
-        f"{words_of(line.scope, target, name)} = {shown(line, target, value)} in place of "
+        f"{words_of(line.scope, target, name)} = {shown(line, target, value)}{source} in place of "
         f"{shown(line, target)}{why}"
     )
 

@@ -42,11 +42,12 @@ def edits_of_copy(line: Line, claim: Claim) -> Iterator[Edit]:
     value, half = line.pair(0)
     yield Edit("sign", TOP, -value, half, partial("{}".format, "the sign of the result turned"))
     for factor, family, why in ways_of_units(line.scope.units[line.node.id]):
-        words = partial("the result in the wrong unit: {}".format, why)
+        words = partial("the result {}".format, why)
         own = "result unit" if family == "unit" else family
         yield Edit(own, TOP, value * factor, half * factor, words)
     for power in (1, -1, 2, -2):
-        words = partial("the decimal point of the result moved by {}".format, abs(power))
+        places = "one place" if abs(power) == 1 else f"{abs(power)} places"
+        words = partial("the decimal point of the result moved by {}".format, places)
         size = 10.0**power
         yield Edit("decimal", TOP, value * size, half * size, words, 0.5 * (abs(power) - 1))
     yield from _miscopied(line, claim)
