@@ -25,6 +25,7 @@ from lineproof.audit.data import (
 from lineproof.audit.findings import named_clause
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.search.drawing import SOURCE as DRAWING
+from lineproof.audit.shared import shared_slips
 from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
 from lineproof.package.words import AUDIT_REPORT
@@ -157,6 +158,8 @@ class Report:
                 sheet.table(
                     "severities", ["Findings", "Number"], rows, title="Findings by severity"
                 )
+            for number, slip in enumerate(shared_slips(audit), 1):
+                sheet.note(f"shared-{number}", slip, title="Findings with one slip in common")
             if audit.judged:
                 counts = Counter(judged.verdict for judged in audit.judged)
                 said = [

@@ -9,6 +9,7 @@ from typing import Any
 from lineproof.audit.data import Audit, Effect, Finding, Judged, Severity, Slip, Verdict
 from lineproof.audit.findings import as_typed, cited, shown
 from lineproof.audit.graph import Graph, Node
+from lineproof.audit.shared import shared_slips
 from lineproof.quantity.units import internal_factor
 from lineproof.sentences import begun
 from lineproof.typeset import printable
@@ -44,6 +45,7 @@ def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
     yield from (f"note: {note}" for note in audit.notes)
     findings = audit.findings
     yield _many(len(findings), "finding", "findings") if findings else "no findings"
+    yield from shared_slips(audit)
     number = 0
     for severity in Severity:
         group = [finding for finding in findings if finding.severity is severity]
@@ -95,7 +97,8 @@ def _remarks(audit: Audit, graph: Graph) -> Iterator[str]:
 def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
     """Return an audit as plain data.
 
-    It holds ``calc``, ``digest``, ``counts``, ``judged``, ``findings`` and ``notes``.
+    It holds ``calc``, ``digest``, ``counts``, ``judged``, ``findings``, ``shared`` (sentences on
+    slips that several findings have in common) and ``notes``.
 
     Values of a judged line stand in ``unit``, the unit in which the line prints.
     """
@@ -106,6 +109,7 @@ def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
         "counts": dict(sorted(counts.items())),
         "judged": [_judged(j, graph[j.id]) for j in audit.judged if j.claim is not None],
         "findings": [_finding_data(finding) for finding in audit.findings],
+        "shared": list(shared_slips(audit)),
         "notes": list(audit.notes),
     }
 

@@ -30,6 +30,8 @@ Find = Callable[[Graph, str, Mapping[str, Interval], Claim, Mapping[str, str]], 
 """What :func:`find_slips` is: graph, line, values used, claim, numbers claimed; gives the slips."""
 NOTHING: Mapping[str, str] = MappingProxyType({})
 """No number of a table: each line is searched up to the inputs."""
+WHEREVER = ", wherever it is used"
+"""What is said of a value above the claim, in words that follow those of the slip."""
 MOST_KEPT = 400
 """Edits of so many lines are kept while one table of claims is searched."""
 
@@ -155,7 +157,7 @@ class SlipSearch:
             tried = self._tried(above)
             if tried is None:
                 continue
-            where = ", wherever it is used"
+            where = WHEREVER
             if above in reach.lines:
                 where = f", in {words_of(self._scope, above)}, which carries on to the claim"
             fits += _fits(tried, target, onward, math.exp(-FARTHER * distance), where)
