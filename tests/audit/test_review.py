@@ -365,9 +365,9 @@ def test_signing_is_refused_with_all_that_stands_open() -> None:
     with pytest.raises(UserError) as caught:
         sign(replace(review, findings=(FINDING,)), record, "Kei Mori", "2026-12-02")
     assert caught.value.faults == (
-        "B1: not signed off: 2 lines not marked: flexure/r, flexure/enough",
-        "B1: not signed off: 2 lines marked before a change: data/h, flexure/d",
-        "B1: not signed off: 1 line queried: flexure/a",
+        "B1: not signed off: 2 lines not marked: 2.3, 2.4",
+        "B1: not signed off: 2 lines marked before a change: 1.2, 2.1",
+        "B1: not signed off: 1 line queried: 2.2",
         "B1: not signed off: 1 finding not closed: 1",
     )
 

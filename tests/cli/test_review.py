@@ -144,7 +144,7 @@ def test_signing_off_while_something_is_open_changes_nothing(
     path = save(calc.parent, "beam.review.json", review_of(beam(), state=State.QUERIED))
     before = path.read_bytes()
     assert main(["review", str(calc), "--sign", "Kei Mori", "--on", "2026-12-02"]) == 2
-    assert "B1: not signed off: 3 lines queried: data/h, flexure/d" in capsys.readouterr().err
+    assert "B1: not signed off: 3 lines queried: 1.1, 2.1, 2.2" in capsys.readouterr().err
     assert path.read_bytes() == before
 
 

@@ -152,6 +152,8 @@ class Standing:
     stale_marks: tuple[Stale, ...]
     open_findings: tuple[int, ...]
     conflicts: tuple[Conflict, ...]
+    labels: Mapping[str, str]
+    """The number that a line has in print, by id; the id itself where it has none."""
 
     @property
     def to_check(self) -> int:
@@ -161,9 +163,9 @@ class Standing:
 
     @property
     def open_items(self) -> tuple[str, ...]:
-        """Say what keeps the calc from being signed off, one sentence each."""
+        """Say what keeps the calc from being signed off, lines by their numbers in print."""
         told = [
-            f"{_count(len(lines), 'line')} {what}: {_some(lines)}"
+            f"{_count(len(lines), 'line')} {what}: {_some(self.labels[line] for line in lines)}"
             for lines, what in (
                 (self.unmarked, "not marked"),
                 (self.stale, "marked before a change"),
@@ -174,7 +176,12 @@ class Standing:
         if self.open_findings:
             numbers = [str(number) for number in self.open_findings]
             told.append(f"{_count(len(numbers), 'finding')} not closed: {_some(numbers)}")
-        return (*told, *(f"conflict: {each.sentence}" for each in self.conflicts))
+        return (*told, *(f"conflict: {self._numbered(each)}" for each in self.conflicts))
+
+    def _numbered(self, each: Conflict) -> str:
+        if each.what not in self.labels:
+            return each.sentence
+        return f"{self.labels[each.what]}: {each.sentence.removeprefix(f'{each.what}: ')}"
 
 
 def standing(review: Review, record: Record) -> Standing:
@@ -192,6 +199,7 @@ def standing(review: Review, record: Record) -> Standing:
         stale_marks=stale_marks(review, record),
         open_findings=tuple(f.number for f in review.findings if not f.is_closed),
         conflicts=conflicts(review),
+        labels={line: entry["label"] or line for line, entry in record.entries.items()},
     )
 
 
