@@ -54,9 +54,10 @@ class Panel {
     if (!line.element) return;
     const { calc } = line;
     const words = { accepted: "✓ accepted", seen: "seen", queried: "? query", stale: "stale" };
+    const numbers = calc.found.get(line.id) ?? [];
     const told = [
       calc.disputed.has(line.id) ? "≠ conflict" : words[calc.states.get(line.id)] ?? "",
-      ...(calc.found.get(line.id) ?? []).map((number) => `finding ${number}`),
+      numbers.length ? `finding${numbers.length > 1 ? "s" : ""} ${numbers.join(", ")}` : "",
     ].filter(Boolean).join(", ");
     if (told) line.element.dataset.mark = told;
     else delete line.element.dataset.mark;
@@ -146,8 +147,16 @@ class Panel {
       work.calcs.length > 1 ? `Save ${work.calc.id} to file` : "Save to file";
   }
 
+  // Written anew after every mark: what somebody is writing about a finding stays, and so does the focus.
   findings() {
     const { calc } = this.work;
+    const list = this.part.get("findings");
+    const drafts = new Map([...list.querySelectorAll("details")].map((form) => [form.dataset.about, {
+      calc: form.dataset.calc, open: form.open, text: form.querySelector("textarea").value,
+    }]));
+    const active = list.contains(document.activeElement) ? document.activeElement : null;
+    const number = active?.closest("details")?.dataset.about;
+    const what = active?.dataset.say ? `[data-say="${active.dataset.say}"]` : active?.tagName;
     this.part.get("findings").replaceChildren(...this.work.review().findings.map((found) => {
       const item = made("li", "", { value: found.number });
       item.append(made("strong", `${found.severity}, ${standingOf(found)}. `), found.text, " ");
@@ -164,15 +173,19 @@ class Panel {
           item.append(made("p", `${word}, ${said.by}, ${said.at.slice(0, 10)}${said.text ? `: ${said.text}` : ""}`));
         }
       }
-      item.append(this.reply(found));
+      const draft = drafts.get(String(found.number));
+      item.append(this.reply(found, draft?.calc === calc.id ? draft : undefined));
       return item;
     }));
+    if (number) list.querySelector(`[data-about="${number}"]`)?.querySelector(what)?.focus();
   }
 
   // What can be said of a finding: by its designer an answer, by its checker all else.
-  reply(found) {
-    const form = made("details");
-    const text = made("textarea", "", { rows: 2, maxLength: LONGEST });
+  reply(found, draft = { open: false, text: "" }) {
+    const form = made("details", "", { open: draft.open });
+    form.dataset.about = String(found.number);
+    form.dataset.calc = this.work.calc.id;
+    const text = made("textarea", "", { rows: 2, maxLength: LONGEST, value: draft.text });
     text.setAttribute("aria-label", `About finding ${found.number}`);
     form.append(made("summary", "Answer, back-check, close"), text);
     const row = made("div", "", { className: "rv-row" });

@@ -52,7 +52,8 @@ class Desk {
     this.work.store("lineproof reviewer", `${this.work.name}\n${this.work.initials}`);
     this.panel.person();
     this.panel.line();
-    this.panel.say(this.work.refusal());
+    const { name } = this.work;
+    this.panel.say(this.work.refusal() || `Marks and findings are now written down as ${name}'s.`);
   }
 
   askName() {
@@ -98,7 +99,11 @@ class Desk {
 
   step(direction, test = () => true) {
     const shown = this.work.shown();
-    const next = this.work.towards(direction, (line) => (!shown || shown.has(line)) && test(line));
+    const fits = (line) => (!shown || shown.has(line)) && test(line);
+    // From a line that the filter hides all those shown are new: they are begun from their end.
+    const anew = shown && this.work.line && !shown.has(this.work.line)
+      ? this.work.steps.filter(fits).at(direction > 0 ? 0 : -1) : null;
+    const next = this.work.towards(direction, fits) ?? anew;
     if (next) this.go(next);
     else this.panel.say(direction > 0 ? "No further line of those shown." : "No line before it.");
   }
@@ -208,19 +213,22 @@ class Desk {
     part.get("finding").value = "";
     part.get("lines").value = "";
     part.get("raise").open = false;
+    part.get("raise").querySelector("summary").focus(); // its button is hidden now
     this.refresh();
     this.panel.say(`Finding ${number} is written down.`);
   }
 
   reply(button) {
     const list = button.dataset.say;
-    const text = button.closest("details").querySelector("textarea").value.trim();
+    const field = button.closest("details").querySelector("textarea");
+    const text = field.value.trim();
     const found = this.work.review().findings.find((each) => each.number === Number(button.dataset.finding));
     if (!this.work.name) this.may(false);
     else if (list !== "responses" && !this.may(false)) return;
     else if (list !== "closed" && !text) this.panel.say("Write it first.");
     else {
       this.work.say(found, list, text);
+      field.value = "";
       this.refresh();
       this.panel.say(`Finding ${found.number}: ${standingOf(found)}.`);
     }

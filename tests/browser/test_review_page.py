@@ -396,9 +396,12 @@ def test_a_finding_is_written_answered_back_checked_and_closed(opened: Open) -> 
         if not page.get_by_label("Your name").is_visible():
             page.locator("[data-rv=person-name]").click()
         page.get_by_label("Your name").fill(who)
-        item.get_by_text("Answer, back-check, close").click()
+        if not page.get_by_label("About finding 1").is_visible():
+            item.get_by_text("Answer, back-check, close").click()
         page.get_by_label("About finding 1").fill(text)
-        item.get_by_role("button", name=what, exact=True).click()
+        item.get_by_role("button", name=what, exact=True).press("Enter")
+        assert page.evaluate("document.activeElement.textContent") == what  # not lost to the body
+        assert page.get_by_label("About finding 1").input_value() == ""
     assert "Finding 1: closed." in status(page)
     assert margins(page) == {}
     (found,) = read_review(saved(page)).findings
@@ -410,6 +413,24 @@ def test_a_finding_is_written_answered_back_checked_and_closed(opened: Open) -> 
         ("Kei Mori", "Right."),
     ]
     assert found.is_closed
+
+
+def test_what_is_being_written_about_a_finding_outlasts_a_mark(opened: Open) -> None:
+    page = opened(html_with(with_finding()))
+    page.get_by_text("Answer, back-check, close").click()
+    page.get_by_label("About finding 4").fill("Not on the")
+    row(page, "data/h").locator(".result").click()
+    page.get_by_role("button", name="Assumption accepted").click()
+    assert margins(page)["data/h"] == "✓ accepted"
+    assert page.get_by_label("About finding 4").input_value() == "Not on the"
+
+
+def test_a_filter_that_hides_the_line_in_hand_is_stepped_from_its_first_line(opened: Open) -> None:
+    page = opened(html_with(with_finding()))
+    row(page, "last/wide").locator(".result").click()
+    page.get_by_role("button", name="Findings 1").click()
+    page.keyboard.press("n")
+    assert page.locator(".rv-here").get_attribute("id") == "data/b"
 
 
 def test_the_originator_answers_but_does_not_close(opened: Open) -> None:
