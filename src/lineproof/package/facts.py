@@ -137,17 +137,18 @@ def _cover_facts(facts: _Tables, codes: Mapping[str, Any]) -> tuple[Fact, ...]:
 
 
 def _locations(facts: _Tables, calcs: Sequence[str]) -> tuple[Fact, ...]:
-    """Say where the calculations stand: one by grid and level, several a line each."""
+    """Say where the calculations stand: one by grid and level, several a line each.
+
+    A calculation without a place has its line all the same, to be filled in by hand.
+    """
     rows = {_text(row, "calc"): row for row in facts.rows("locations")}
     if len(calcs) > 1 and rows:
-        told = {calc: rows[calc] for calc in calcs if calc in rows}
+        told = {calc: rows.get(calc, {}) for calc in calcs}
         return tuple(
             Fact(f"Location of {calc}", "; ".join(filter(None, map(partial(_text, row), _PLACE))))
             for calc, row in told.items()
         )
-    if rows and calcs and calcs[0] not in rows:
-        return ()
-    place = rows[calcs[0]] if rows and calcs else facts.table("location")
+    place = rows.get(calcs[0], {}) if rows and calcs else facts.table("location")
     return tuple(Fact(key.capitalize(), _text(place, key)) for key in _PLACE)
 
 
