@@ -7,9 +7,10 @@ import csv
 import io
 import re
 from collections.abc import Iterator, Mapping
+from dataclasses import replace
 from typing import Any
 
-from lineproof.drawing import dxf, from_json
+from lineproof.drawing import Text, dxf, from_json, words
 from lineproof.record.validate_shown import FILES
 
 _NUMBER = re.compile(r"[+-]?\d+(?:\.\d+)?(?:[eE][+-]?\d+)?\Z", re.ASCII)
@@ -17,6 +18,8 @@ _STARTS_A_FORMULA = ("=", "+", "-", "@", "\t", "\r", "\n", "＝", "＋", "－", 
 """With one of these a spreadsheet takes a cell for a formula."""
 _PLAIN = str.maketrans({"−": "-", "\u2009": "", "\u202f": ""})
 _LONGEST = 60
+_BELOW = 6.0
+"""From the lower edge of a figure to its title in the DXF, mm on paper."""
 
 
 def file_name(calc_id: str) -> str:
@@ -31,7 +34,10 @@ def file_name(calc_id: str) -> str:
 
 def calc_files(record: Mapping[str, Any]) -> dict[str, bytes]:
     """Return the files that a record's figures and tables ask for, by name."""
-    return {name: _WRITERS[ending](entry) for name, ending, entry in _asked(record)}
+    return {
+        name: table_csv(entry) if ending == "csv" else _drawing(record, entry)
+        for name, ending, entry in _asked(record)
+    }
 
 
 def calc_file_names(record: Mapping[str, Any]) -> list[str]:
@@ -49,8 +55,16 @@ def _asked(record: Mapping[str, Any]) -> Iterator[tuple[str, str, Mapping[str, A
                 yield f"{start}-{entry[ending]}.{ending}", ending, entry
 
 
-def _drawing(entry: Mapping[str, Any]) -> bytes:
-    return dxf(from_json(entry["figure"]))
+def _drawing(record: Mapping[str, Any], entry: Mapping[str, Any]) -> bytes:
+    """Return a figure as DXF with its calc and title below it.
+
+    Bar marks begin anew in each calc: without its id those of two beams would be one in a drawing.
+    """
+    figure = from_json(entry["figure"])
+    told = f"{record['calc']['id']}: {figure.caption or entry.get('caption') or entry['title']}"
+    below = ((figure.width / 2 - figure.origin[0]) / figure.scale,
+             (-_BELOW - figure.origin[1]) / figure.scale)  # fmt: skip
+    return dxf(replace(figure, shapes=(*figure.shapes, Text(below, words(told)))))
 
 
 def table_csv(entry: Mapping[str, Any]) -> bytes:
@@ -76,6 +90,3 @@ def _cell(text: str) -> str:
     if _NUMBER.match(number):
         return number
     return f"'{text}" if text.lstrip(" ").startswith(_STARTS_A_FORMULA) else text
-
-
-_WRITERS = {"dxf": _drawing, "csv": table_csv}
