@@ -55,7 +55,9 @@ def test_typed_values(typed: Any, unit: str, value: float, number: str) -> None:
         (32, "MPa", "f_c: '32' has no unit; write '32 MPa'"),
         (32.5, "MPa", "f_c: '32.5' has no unit; write '32.5 MPa'"),
         ("32 mm", "MPa", ("f_c: '32 mm' is a length, but a stress or pressure is needed; "
-                          "write it in MPa, Pa, kPa, GPa, psi, ksi")),
+                          "write it in MPa, Pa, kPa, GPa, psi, ksi, psf, ksf")),
+        ("2 kN", "kPa", ("f_c: '2 kN' is a force, but a stress or pressure is needed; "
+                         "write it in kPa, MPa, Pa, GPa, psi, ksi, psf, ksf")),
         ("2 ft 2 in", "in", ("f_c: '2 ft 2 in': 'ft 2 in' is not a unit of the list; "
                              "write one number with one unit, such as '26 in'")),
         ("32 Mpa", "MPa", "f_c: '32 Mpa': 'Mpa' is not a unit of the list; write 'MPa'"),

@@ -151,9 +151,11 @@ def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: U
     if unit.kind != wanted.kind:
         if wanted.kind == "number":
             raise UserError(f"{name}: {echo(given)} has a unit; write the bare number {number!r}")
+        usual = example_unit(wanted)  # a load is thought of in kPa, a strength in MPa: that first
+        units = dict.fromkeys((usual, *units_of_kind(wanted.kind)))
         raise UserError(
             f"{name}: {echo(given)} is a {unit.kind}, but a {wanted.kind} is needed; "
-            f"write it in {', '.join(u for u in units_of_kind(wanted.kind)[:6])}"
+            f"write it in {', '.join(units)}"
         )
     return unit
 
