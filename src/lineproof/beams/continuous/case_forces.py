@@ -20,6 +20,8 @@ from lineproof.record import Entry
 
 NEAR = 1e-6
 """Distance within which a station and a load are at the same place [mm]."""
+_ROUNDED, _LEAST = 1e-4, 1e6
+"""Part by which lines may differ from the analysis, and the least moment or shear it is of."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -62,6 +64,15 @@ def record_forces(
         x = lines.record_zero_shear()
     steps.bind(x_f=x)
     lines.record_section(x)
+    _stop_unless_same(steps, demand)
+
+
+def _stop_unless_same(steps: Steps, demand: Demand) -> None:
+    """Stop where the lines give another moment or shear than that of the demand they stand for."""
+    for symbol, size in (("M_f", abs(demand.M)), ("V_f", abs(demand.V))):
+        if abs(steps.entry(symbol).value - size) > _ROUNDED * max(size, _LEAST):
+            msg = f"{demand}: {symbol} is recorded as {steps.entry(symbol).value!r}"
+            raise AssertionError(msg)
 
 
 def factor_text(factor: float) -> str:

@@ -19,6 +19,7 @@ from lineproof.beams.continuous.cutoff_sets import (
     record_resistance,
 )
 from lineproof.beams.continuous.cutoff_support import Hooks, record_section
+from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.resistance import Standing, top_layers
 from lineproof.beams.continuous.resistance_cover import ROUND_OFF, Gap, Station
@@ -78,11 +79,21 @@ class Laid:
 
 
 def _near(writers: Writers, station: Station) -> tuple[End, float]:
-    """Return the nearer support of a station and its distance from that axis."""
+    """Return the support that a station is seen from and its distance from that axis.
+
+    It is the nearer one, of a cantilever the one that holds it.
+    """
     length = writers.designed.outline.lengths[station.span - 1]
-    if station.local <= length / 2:
-        return "left", station.local
-    return "right", length - station.local
+    near = _end(writers.designed, station, length / 2)
+    return near, station.local if near == "left" else length - station.local
+
+
+def _end(designed: Designed, station: Station, middle: float) -> End:
+    """Return the end of its span that a station belongs to, parted at ``middle`` [mm]."""
+    supports = designed.outline.supports[station.span - 1 : station.span + 1]
+    if designed.cantilever(station.span):
+        return "right" if supports[0].kind == "free" else "left"
+    return "left" if station.local <= middle else "right"
 
 
 def record_moment(laid: Laid, station: Station, key: str, title: str) -> None:
@@ -199,8 +210,7 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
     writers, face = laid.writers, station.face
     designed, sheet = writers.designed, writers.sheet
     near, t = _near(writers, station)
-    middle = sum(designed.forces.beam.faces(station.span)) / 2
-    end: End = "left" if station.local < middle else "right"
+    end = _end(designed, station, sum(designed.forces.beam.faces(station.span)) / 2)
     d_v = _section(laid, station, end, key)["d_v"]
     side = demand_at(designed, station.span, np.array([station.local])).side(face)
     capped = float(side.free[0]) > float(side.cap[0])
