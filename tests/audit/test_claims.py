@@ -119,7 +119,7 @@ row 3, claimed: d: '539' has no unit; write '539 mm'
 row 6, id: given/b is claimed in row 5 already; keep one of them
 row 7, claimed: h: '600,5 mm' is not a number with a unit; write a decimal point: '600.5 mm'
 row 8, claimed: n_b: 'four' is not a number with a unit; write for example '25'
-row 9, claimed: l: '40 kN' is a force, but a length is needed; write it in mm, cm, m, in, ft
+row 9, claimed: l: '40 kN' is a force, but a length is needed; write it in m, mm, cm, in, ft
 row 10, id: 'strength/strength' is a check and has no value; claim the lines it compares
 row 11, id: names no line; write the id that the blank table shows
 row 12, claimed: '1 200' has marks between its digits; write '1200'

@@ -43,7 +43,8 @@ def test_the_elevation_is_the_figure_at_full_scale() -> None:
     audit = made.audit()
     assert (audit.errors, audit.fixes) == ([], [])
     texts: list[Any] = list(made.modelspace().query("MTEXT"))
-    assert sum(text.text.startswith("B9: ") for text in texts) == 1  # bar marks begin anew in each calc
+    # bar marks begin anew in each calc
+    assert sum(text.text.startswith("B9: ") for text in texts) == 1
     dimensions: list[Any] = list(made.modelspace().query("DIMENSION"))
     assert [dimension.get_measurement() for dimension in dimensions] == pytest.approx(SPANS)
 
