@@ -23,10 +23,18 @@ from lineproof.beams.continuous.section_checks import (
 )
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import minimum
-from lineproof.standards.a23_3.bars import BARS, LEAST_CLEAR
+from lineproof.standards.a23_3.bars import (
+    BARS,
+    FITS,
+    FITS_OVERHANG,
+    FITS_SECOND,
+    LEAST_CLEAR,
+)
 from lineproof.standards.catalogue import criteria
 
 ANCHORAGE = "anchorage in the support"
+_ROOM = frozenset((FITS.key, FITS_SECOND.key, FITS_OVERHANG.key))
+_BEAM_OR_CONCRETE = "a deeper or wider beam, or stronger concrete"
 FOR_SHEAR = "the bars that shear and torsion ask for (11.3.9, 11.3.10.6)"
 
 
@@ -120,11 +128,13 @@ def _each_its_own(
         if able:
             yield min(able, key=lambda c: order([c], [section]))
             continue
-        why = ", ".join(_said(key) for key, _ in stopped[section.name].most_common(3))
-        support = "a wider support, " if ANCHORAGE in why else ""
+        keys = [key for key, _ in stopped[section.name].most_common(3)]
+        support = "a wider support, " if ANCHORAGE in keys else ""
+        # Where there is no room for the bars, stronger concrete makes none.
+        beam = "a deeper or wider beam" if _ROOM.issuperset(keys) else _BEAM_OR_CONCRETE
         faults.add(
-            f"{what}: no bars pass every check at {section.name}: stopped by: {why}; write "
-            f"{support}a deeper or wider beam, or stronger concrete"
+            f"{what}: no bars pass every check at {section.name}: stopped by: "
+            f"{', '.join(map(_said, keys))}; write {support}{beam}"
         )
     faults.raise_if_any()
 
