@@ -188,6 +188,12 @@ def test_bars_claimed_for_their_area_are_read_by_the_bar_table(
     assert "900 mm² (3-20M) does not follow" in audit.findings[0].what
 
 
+def test_bars_over_a_web_and_its_overhangs_are_whole_bars(tmp_path: Path) -> None:
+    lines = {"A_s = (n_t + 2*n_o)*A_b": "mm2"}
+    graph = Graph(sheet_of(lines, {"n_t": "2", "n_o": "1", "A_b": "300 mm2"}).close())
+    assert read(graph, tmp_path, "id,claimed\nbeam/A_s,4-20M\n")[0].value == 1200.0
+
+
 def test_bars_are_no_area_that_a_moment_requires(tmp_path: Path) -> None:
     """A_sr = M_f/(phi_s f_y 0.9 d) is worked out; 4-20M is what was chosen for it."""
     lines = {"A_sr = M_f/(phi_s*f_y*0.9*d)": "mm2"}

@@ -9,11 +9,11 @@ from decimal import Decimal
 from lineproof.audit.data import Claim
 from lineproof.audit.graph import Graph, Node
 from lineproof.errors import UserError
-from lineproof.formula.tree import Binary, Name
+from lineproof.formula.tree import Binary, Name, names_of
 from lineproof.quantity import echo
 from lineproof.quantity.units import UNITS
 from lineproof.record.entry import GIVEN
-from lineproof.standards.a23_3.bars import AREA_OF_BARS, BARS
+from lineproof.standards.a23_3.bars import BARS
 from lineproof.typeset.values import told
 
 _GROUP = re.compile(r"(\d{1,3}) ?[-–x×] ?(\d{2}M)\Z", re.ASCII | re.IGNORECASE)
@@ -54,15 +54,12 @@ def _is_of_whole_bars(graph: Graph, node: Node) -> bool:
     """Tell whether a line is a number of bars times the area of one, or a sum of such lines."""
     if node.kind == GIVEN:
         return node.symbol in _GIVEN_AREAS and UNITS[node.unit].kind == "area"
-    if node.tree == AREA_OF_BARS.tree:
-        return True
-    return _is_sum(node) and all(_is_of_whole_bars(graph, graph[i]) for i in node.args.values())
-
-
-def _is_sum(node: Node) -> bool:
     match node.tree:
+        case Binary("*", count, Name(area)) if area.startswith("A_b"):
+            counts = names_of(count)
+            return bool(counts) and all(name.startswith("n_") for name in counts)
         case Binary("+", Name(), Name()):
-            return True
+            return all(_is_of_whole_bars(graph, graph[i]) for i in node.args.values())
     return False
 
 
