@@ -58,12 +58,12 @@ def read_from(text: str) -> Interval:
 
     >>> read_from("388"), read_from("0.50")
     (Interval(low=387.5, high=388.5), Interval(low=0.495, high=0.505))
-    >>> read_from("12300")
-    Interval(low=12250.0, high=12350.0)
+    >>> read_from("12300"), read_from("2e-3")
+    (Interval(low=12250.0, high=12350.0), Interval(low=0.0015, high=0.0025))
     """
     number = Decimal(text)
     last = int(number.as_tuple().exponent)
-    if "." not in text and number:
+    if "." not in text and number and last >= 0:
         whole = int(number.normalize().as_tuple().exponent)
         last = max(min(last, 0), min(whole, number.adjusted() - LEAST_DIGITS + 1), 0)
     half = Decimal(5).scaleb(last - 1)
