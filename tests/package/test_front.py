@@ -201,6 +201,19 @@ def test_a_wide_table_stays_on_the_paper(holding: Record) -> None:
     assert max(right) <= 612  # 8.5 in at 72 points
 
 
+def test_the_first_drawing_stands_below_the_heading_of_the_summary(holding: Record) -> None:
+    """The table that follows it stands below it, where a drawing that floats would follow it."""
+    heights: dict[str, float] = {}
+
+    def note(text: str, onto: Any, matrix: Any, *_font: Any) -> None:
+        heights.setdefault(text.strip(), onto[5] + onto[3] * matrix[5])
+
+    reader = pypdf.PdfReader(io.BytesIO(to_pdf(build_package([holding]))))
+    page = next(p for p in reader.pages if "Elevation, 1 : 150" in p.extract_text())
+    page.extract_text(visitor_text=note)
+    assert heights["Elevation, 1 : 150"] > heights["Governing moments"]
+
+
 def test_every_anchor_of_several_calcs_is_one(page: str) -> None:
     ids = re.findall(r'\sid="([^"]*)"', page)
     assert len(ids) == len(set(ids))
