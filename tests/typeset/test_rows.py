@@ -60,6 +60,23 @@ def test_a_line_prints_formula_substitution_and_coherent_result() -> None:
     assert row.title == "Moment resistance"
 
 
+def test_an_origin_names_both_symbols_only_where_they_print_differently() -> None:
+    """A station and the place of a section may both print as x: "x = x" would say nothing."""
+    alike = Notation([
+        Symbol("x_f", "x", "", "", "place of the section", "m"),
+        Symbol("x_st", "x", "", "", "station", "m"),
+        Symbol("x_t", "x", "t", "", "end of the bars", "m"),
+    ])  # fmt: skip
+    row = printed_row(
+        entry("line", symbol="V", formula="V = w*x_f", args={"x_f": "p/x_st", "w": "p/x_t"},
+              printed={"args": {"w": "2", "x_f": "3"}, "result": "6", "unit": "kN",
+                       "coherent": None}),
+        alike, {"p/x_st": "1.1", "p/x_t": "1.2"},
+    )  # fmt: skip
+
+    assert [plain(origin.symbol) for origin in row.origins] == ["x", "w = x_t"]
+
+
 def test_a_line_that_only_names_a_value_is_not_printed_twice() -> None:
     """A line "M = M_f" has no substitution apart from its result."""
     row = printed_row(

@@ -170,8 +170,8 @@ def _origins(
 def _traced(name: str, source: str, notation: Notation) -> Math:
     """Return the symbol of an argument; where its line has another one, "b = b_f"."""
     symbol = symbol_math(symbol_of(name, notation))
-    own = source.partition("/")[2]
-    return symbol if own == name else row([symbol, EQUALS, symbol_math(symbol_of(own, notation))])
+    own = symbol_math(symbol_of(source.partition("/")[2], notation))
+    return symbol if own == symbol else row([symbol, EQUALS, own])  # two names may print alike
 
 
 def _basis(entry: Entry) -> str:
