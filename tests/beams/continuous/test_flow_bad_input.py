@@ -52,6 +52,15 @@ def matches(faults: list[str], *wanted: str) -> None:
         assert start_of_it in fault, fault
 
 
+def test_a_wrong_span_hides_no_fault_of_what_is_given_by_span() -> None:
+    matches(
+        refused_at_start(spans=[7.6, "9.2 m", "7.6 m"], h=620, bottom_bars=["5-20N", None, None]),
+        "spans, span 1: '7.6' has no unit; write '7.6 m'",
+        "h: '620' has no unit; write '620 mm'",
+        "bottom_bars",
+    )
+
+
 def test_spans_of_nothing_and_of_500_m() -> None:
     matches(
         refused_at_start(spans=["0 m", "500 m", "7.6 m"]),

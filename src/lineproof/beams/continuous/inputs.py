@@ -29,6 +29,7 @@ from lineproof.beams.continuous.typed_beam import (
     read_loads,
     read_spans,
     read_supports,
+    spans_counted,
 )
 from lineproof.beams.continuous.typed_torques import KINDS_OF_TORSION, read_torques
 from lineproof.beams.inputs import (
@@ -136,8 +137,8 @@ def read_inputs(
     spans = reader.take("spans", read_spans) or ()
     fields: dict[str, Any] = {"spans": spans} | _read_alone(reader)
     reader.take("web_openings", no_openings)
-    if spans:
-        fields |= _read_by_span(reader, given, spans)
+    if count := len(spans) or spans_counted(given["spans"]):
+        fields |= _read_by_span(reader, given, spans, count)
     fields["forces_file"] = reader.take("forces_csv", read_forces_file, given, fields)
     _check_together(fields, given, reader.faults)
     reader.faults.raise_if_any()
@@ -180,14 +181,17 @@ def _read_alone(reader: InputReader) -> dict[str, Any]:
 
 
 def _read_by_span(
-    reader: InputReader, given: Mapping[str, Any], spans: tuple[Typed, ...]
+    reader: InputReader, given: Mapping[str, Any], spans: tuple[Typed, ...], count: int
 ) -> dict[str, Any]:
-    """Read the inputs that have a value for every span or support."""
-    take, count = reader.take, len(spans)
+    """Read the inputs that have a value for every span or support.
+
+    A wrong length of a span hides no other fault; only loads have places that rest on it.
+    """
+    take = reader.take
     return {
         "depths": take("h", read_depths, count),
         "supports": take("supports", read_supports, given["columns"], count),
-        "loads": take("loads", read_loads, spans),
+        "loads": take("loads", read_loads, spans) if spans else None,
         "redistribution": take("redistribution", _read_redistribution) or {},
         "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
         "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),

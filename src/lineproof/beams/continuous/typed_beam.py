@@ -93,6 +93,11 @@ def read_spans(name: str, given: object) -> tuple[Typed, ...]:
     return tuple(read)
 
 
+def spans_counted(given: object) -> int:
+    """Return how many spans are typed, whatever their lengths; 0 where that cannot be told."""
+    return len(given) if isinstance(given, list | tuple) and len(given) <= MOST_SPANS else 0
+
+
 def read_depths(name: str, given: object, spans: int) -> tuple[Typed, ...]:
     """Read one overall depth for all spans, or one a span."""
     if not isinstance(given, list | tuple):
