@@ -213,14 +213,15 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
     end = _end(designed, station, sum(designed.forces.beam.faces(station.span)) / 2)
     d_v = _section(laid, station, end, key)["d_v"]
     side = demand_at(designed, station.span, np.array([station.local])).side(face)
-    capped = float(side.free[0]) > float(side.cap[0])
+    inside = t < half_of(designed, station.span, near)
+    capped = inside or float(side.free[0]) > float(side.cap[0])
     cap = _record_cap(laid, station, end, key) if capped else None
     with sheet.part(key, title):
         steps = _developed(laid, station)
-        x = sheet.given("x_st", plain(t, "mm"), source="worst of all stations")
+        x = _record_place(writers, station, near, t)
         demand = _demand(writers, station, tension=True)
         writers.forces(steps, demand, near, x)
-        _record_shear(writers, steps, station)
+        _record_shear(writers, steps, station.x - station.local + demand.x)
         helps = demand.M > 0 if face == "bottom" else demand.M < 0
         steps.bind(d_v=d_v)
         steps.line(clause.TENSION if helps else clause.TENSION_OTHER_SIDE)
@@ -256,8 +257,9 @@ def record_turned(laid: Laid, station: Station, key: str, title: str) -> None:
         laid.check(steps, shear_bars.COMPRESSION_SIDE_HOLDS, station, tension=True)
 
 
-def _record_shear(writers: Writers, steps: Steps, station: Station) -> None:
-    stretch = stretch_at(writers.designed, station.x)
+def _record_shear(writers: Writers, steps: Steps, x: float) -> None:
+    """Record what the stirrups do at a place along the beam, inside a support at its face."""
+    stretch = stretch_at(writers.designed, x)
     if writers.designed.shear:
         writers.shear(steps, stretch, ("V_s", "theta"))
         return
