@@ -85,6 +85,7 @@ TEE: dict[str, float] = {"b": 900, "b_w": 300, "h_f": 100, "n_E": 8, "A_s": 7000
 STAGE = {"delta_DL": 14.0, "delta_sus": 8.0}
 DEFLECTION = (
     W("deflection.STEEL_MODIFIER", {"f_y": 500}, "0.4 + 500/670 = 1.14627"),
+    W("deflection.STEEL_MODIFIER", {"f_y": 400}, "max(0.4 + 0.597, 1) = 1.000"),
     W("deflection.DENSITY_MODIFIER", {"gamma_c": 1850}, "1.65 - 0.0003*1850 = 1.095"),
     W("deflection.DENSITY_MODIFIER", {"gamma_c": 2350}, "max(1.65 - 0.705, 1) = 1.000"),
     W("deflection.LEAST_DEPTH", {"l_n": 7.2, "k_h": 16}, "7200/16 = 450"),

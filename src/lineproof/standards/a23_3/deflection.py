@@ -65,9 +65,9 @@ LIMITS = LookupTable(
 )
 
 STEEL_MODIFIER = _formula(
-    "k_fy = 0.4 + f_y/670",
+    "k_fy = max(0.4 + f_y/670, 1)",
     clause="9.8.2.1",
-    title="Modifier of the least depth for the strength of the bars",
+    title="Modifier of the least depth for the strength of the bars, none for 400 MPa",
     basis=FROM_MEMORY,
     numbers={"670": "MPa"},
 )
