@@ -154,10 +154,14 @@ def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: U
         usual = example_unit(wanted)  # a load is thought of in kPa, a strength in MPa: that first
         units = dict.fromkeys((usual, *units_of_kind(wanted.kind)))
         raise UserError(
-            f"{name}: {echo(given)} is a {unit.kind}, but a {wanted.kind} is needed; "
+            f"{name}: {echo(given)} is {_a(unit.kind)}, but {_a(wanted.kind)} is needed; "
             f"write it in {', '.join(units)}"
         )
     return unit
+
+
+def _a(kind: str) -> str:
+    return f"an {kind}" if kind.startswith("a") else f"a {kind}"
 
 
 def _read_pint(name: str, given: object, wanted: Unit) -> Typed:

@@ -138,6 +138,9 @@ _SAME_UNIT = {
 _EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "force": "kN"}
 _EXAMPLES = "one such as 'mm', 'kN', 'kN.m' or 'MPa'"
 
+_PLAIN = str.maketrans("·⋅∙•×*²³⁴", "......234")
+"""Dots and crosses between units, raised digits."""
+
 METRE_SYSTEM = {
     "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
     "moment": "kN.m", "load per length": "kN/m", "stress or pressure": "kPa",
@@ -150,8 +153,7 @@ METRE_SYSTEM = {
 def plain_spelling(text: str) -> str:
     """Return the closed list's way to write a unit: ``kN·m`` becomes ``kN.m``."""
     tidy = text.strip()
-    for given, plain in (("·", "."), ("*", "."), ("²", "2"), ("³", "3"), ("⁴", "4"), ("^", "")):
-        tidy = tidy.replace(given, plain)
+    tidy = tidy.translate(_PLAIN).replace("^", "")
     return _SAME_UNIT.get(tidy, tidy)
 
 
