@@ -118,7 +118,7 @@ row 2, id: 'strength/M_rr' is not a line of this calc; write 'strength/M_r' or '
 row 3, claimed: d: '539' has no unit; write '539 mm'
 row 6, id: given/b is claimed in row 5 already; keep one of them
 row 7, claimed: h: '600,5 mm' is not a number with a unit; write a decimal point: '600.5 mm'
-row 8, claimed: n_b: 'four' is not a number with a unit; write for example '25'
+row 8, claimed: 'four' holds no number; write for example '25', or leave the cell empty
 row 9, claimed: l: '40 kN' is a force, but a length is needed; write it in m, mm, cm, in, ft
 row 10, id: 'strength/strength' is a check and has no value; claim the lines it compares
 row 11, id: names no line; write the id that the blank table shows
@@ -210,3 +210,65 @@ def test_bars_are_no_area_that_a_moment_requires(tmp_path: Path) -> None:
 def test_bars_of_a_size_that_there_is_not(graph: Graph, tmp_path: Path) -> None:
     (said,) = faults(graph, tmp_path, "id,claimed\nbeam/A_s,4-22M\n")
     assert said.startswith("row 2, claimed: A_s: '22M' is not a Canadian bar")
+
+
+@pytest.mark.parametrize(
+    ("line", "typed", "value"),
+    [
+        ("strength/M_r", "–207", -207e6),
+        ("strength/M_r", "－2.07e−1 MN⋅m", -207e6),
+        ("strength/M_r", "207 kN•m", 207e6),
+        ("strength/M_r", "'207", 207e6),
+        ("beam/A_s", "1.200 mm²", 1.2),
+    ],
+)
+def test_odd_spelling_with_one_meaning_is_read(
+    graph: Graph, tmp_path: Path, line: str, typed: str, value: float
+) -> None:
+    """Dashes for a minus, dots between units, the apostrophe of a text; a point is decimal."""
+    unit = "" if "m" in typed else "kN.m"
+    (claim,) = read(graph, tmp_path, f"id,claimed,unit\n{line},{typed},{unit}\n")
+    assert claim.value == pytest.approx(value, rel=1e-9)
+
+
+@pytest.mark.parametrize(
+    ("line", "typed", "said"),
+    [
+        ("beam/A_s", "1,200", "write '1200', or '1.200' if the comma is the decimal point"),
+        ("beam/A_s", "1.207,5", "has marks between its digits; write '1207.5'"),
+        ("beam/A_s", "1 207,5", "has marks between its digits; write '1207.5'"),
+        ("beam/A_s", "1’207", "has marks between its digits; write '1207'"),
+        ("given/phi_c", "65 %", "is in percent; write '0.65'"),
+        ("beam/d", "02-Dec", "is a date that a spreadsheet made; type it again in a cell of the"),
+        ("beam/d", "12/02/2026", "is a date that a spreadsheet made"),
+        ("beam/d", "(539)", "may be a negative number or not; write '-539' or '539'"),
+        ("beam/d", "539-", "may be a negative number or not; write '-539' or '539'"),
+        (
+            "beam/d",
+            "#N/A",
+            "is an error of a spreadsheet; write the value, or leave the cell empty",
+        ),
+        ("beam/d", "tbd", "holds no number; write for example '25 mm', or leave the cell empty"),
+        ("beam/d", "21.2 inches", "not a unit of the list; write it in mm, cm, m, in, ft"),
+        ("given/f_c", "30 kN/cm2", "not a unit of the list; write it in MPa, Pa, kPa"),
+        ("strength/M_r", "207 kN-m", "'kN-m' is not a unit of the list; write 'kN.m'"),
+        ("given/n_b", "4 bars", "has a unit, and this line has none; write '4'"),
+        ("beam/d", "539 mm2", "'539 mm2' is an area, but a length is needed"),
+    ],
+)
+def test_what_may_be_read_in_two_ways_is_refused(
+    graph: Graph, tmp_path: Path, line: str, typed: str, said: str
+) -> None:
+    (fault,) = faults(graph, tmp_path, f'id,claimed\n{line},"{typed}"\n')
+    assert fault.startswith("row 2, claimed: ")
+    assert said in fault
+
+
+def test_a_label_that_became_a_date_is_named(graph: Graph, tmp_path: Path) -> None:
+    (fault,) = faults(graph, tmp_path, "label,claimed\n02-Jan,539 mm\n")
+    assert "a spreadsheet made a date of it, so type it again" in fault
+
+
+def test_the_line_that_names_the_mark_between_cells_is_no_row(graph: Graph, tmp_path: Path) -> None:
+    (claim,) = read(graph, tmp_path, "sep=;\nid;claimed\nbeam/d;539 mm\n")
+    assert (claim.value, claim.row) == (539.0, 2)

@@ -151,7 +151,11 @@ METRE_SYSTEM = {
 
 
 def plain_spelling(text: str) -> str:
-    """Return the closed list's way to write a unit: ``kN·m`` becomes ``kN.m``."""
+    """Return the closed list's way to write a unit.
+
+    >>> plain_spelling("kN·m"), plain_spelling("kN⋅m"), plain_spelling("N/mm²")
+    ('kN.m', 'kN.m', 'MPa')
+    """
     tidy = text.strip()
     tidy = tidy.translate(_PLAIN).replace("^", "")
     return _SAME_UNIT.get(tidy, tidy)

@@ -11,19 +11,16 @@ from pathlib import Path
 from lineproof.audit.claims.bars import area_claimed, bars_in
 from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.claims.tables import MOST_FAULTS, Row, Table, TableFaults, read_with_faults
+from lineproof.audit.claims.typed import DATE_ADVICE, is_date, read_claimed
 from lineproof.audit.data import Claim, read_from
 from lineproof.audit.effects import place_of
 from lineproof.audit.graph import Graph, Node
 from lineproof.errors import UserError
-from lineproof.quantity import echo, internal_factor, read_quantity
-from lineproof.quantity.digits import MINUS
+from lineproof.quantity import echo, internal_factor
 
 CLAIMED = ("claimed", "value")
 NAMES = ("id", "label", "symbol")
 _WORDS = re.compile(r"[a-z0-9]+")
-_BARE = re.compile(r"[+-]?[\d.,' ]+(?:[eE][+-]?\d+)?\Z")
-_GROUPED = re.compile(r"[+-]?\d{1,3}(?:[ ,']\d{3})+(?:\.\d*)?(?![\d,' ]*\d)")
-"""Digits in groups of three: 12 300 or 12,300."""
 _MOST_PLACES = 6
 _LONGEST_WHERE = 40
 
@@ -156,6 +153,8 @@ class _Reader:
     def _hint(self, text: str) -> str:
         if len(self.faults.faults) >= MOST_FAULTS:
             return ""  # no longer told, and looking takes long
+        if is_date(text):
+            return f"; a spreadsheet made a date of it, so {DATE_ADVICE}"
         names = [*self.symbols, *(node.id for node in self.graph if node.has_value)]
         near = difflib.get_close_matches(text[:80], names, n=3, cutoff=0.6)
         return f"; write {' or '.join(map(repr, near))}" if near else "; take the id of a blank"
@@ -163,18 +162,11 @@ class _Reader:
     # -- the value ---------------------------------------------------------------------------
 
     def _value(self, row: Row, node: Node, typed: str) -> Claim | None:
-        text = " ".join(typed.replace(MINUS, "-").split())
-        grouped = _GROUPED.match(text)
-        if grouped is not None:
-            plain = re.sub("[ ,']", "", grouped[0])
-            fault = f"{echo(typed)} has marks between its digits; write {plain!r}"
-            self.faults.at(row.number, "claimed", fault)
-            return None
-        unit = row.cells.get("unit", "") if _BARE.match(text) else ""
+        text = " ".join(typed.split())
         bars = text if bars_in(text) else ""
         try:
-            text = f"{area_claimed(self.graph, node, bars)} mm2" if bars else f"{text} {unit}"
-            read = read_quantity(node.symbol, text.strip(), node.unit)
+            text = f"{area_claimed(self.graph, node, bars)} mm2" if bars else text
+            read = read_claimed(node, text, row.cells.get("unit", ""))
         except UserError as error:
             self.faults.at(row.number, "claimed", error.faults[0])
             return None

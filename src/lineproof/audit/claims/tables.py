@@ -30,6 +30,7 @@ _MACROS = (".xlsm", ".xltm", ".xlam", ".xlsb")
 _NUMBER = re.compile(r"[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d{1,3})?", re.ASCII)
 _STARTS = ("=", "+", "-", "@", "\t", "\r", "\n", "＝", "＋", "－", "＠")
 """With one of these a spreadsheet takes a cell for a formula."""
+_SEPARATOR = re.compile(r"sep=([,;\t])\r?\n", re.IGNORECASE)
 _UTF_16 = (codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE)
 
 
@@ -110,7 +111,10 @@ def _content(path: Path, name: str) -> bytes:
 
 def _csv_rows(content: bytes, name: str) -> Iterator[list[str]]:
     text = _text(content, name)
-    reader = csv.reader(io.StringIO(text, newline=""), delimiter=_delimiter(text), strict=True)
+    told = _SEPARATOR.match(text)  # a spreadsheet reads this line and shows no row of it
+    text = text[told.end() :] if told else text
+    mark = told[1] if told else _delimiter(text)
+    reader = csv.reader(io.StringIO(text, newline=""), delimiter=mark, strict=True)
     try:
         yield from reader
     except csv.Error as error:
@@ -186,8 +190,11 @@ def _cells(
 
 
 def _without_apostrophe(text: str) -> str:
-    """Return a cell without the apostrophe that kept it from being a formula."""
-    return text[1:] if text.startswith("'") and text[1:].lstrip().startswith(_STARTS) else text
+    """Return a cell without the apostrophe that kept it from being a formula, or a number."""
+    if not text.startswith("'"):
+        return text
+    held = text[1:].lstrip()
+    return text[1:] if held.startswith(_STARTS) or held[:1].isdigit() else text
 
 
 def write_table(headings: Sequence[str], rows: Sequence[Sequence[str]], ending: str) -> bytes:
