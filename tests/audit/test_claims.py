@@ -272,3 +272,15 @@ def test_a_label_that_became_a_date_is_named(graph: Graph, tmp_path: Path) -> No
 def test_the_line_that_names_the_mark_between_cells_is_no_row(graph: Graph, tmp_path: Path) -> None:
     (claim,) = read(graph, tmp_path, "sep=;\nid;claimed\nbeam/d;539 mm\n")
     assert (claim.value, claim.row) == (539.0, 2)
+
+
+@pytest.mark.parametrize(
+    ("typed", "name"),
+    [("m_R", "M_r"), ("Mr", "M_r"), ("Mᵣ", "M_r"), ("φc", "phi_c"), ("ϕ_c", "phi_c"),
+     ("f'c", "f_c"), ("α1", "alpha_1"), ("As", "A_s")],
+)  # fmt: skip
+def test_a_symbol_written_otherwise_gets_its_own_name(
+    graph: Graph, tmp_path: Path, typed: str, name: str
+) -> None:
+    (fault,) = faults(graph, tmp_path, f"symbol,claimed\n{typed},1 mm\n")
+    assert fault.endswith(f"is not a line of this calc; write {name!r}")

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import difflib
 import re
+import unicodedata
 from dataclasses import dataclass
 from functools import cached_property
 from pathlib import Path
@@ -21,6 +22,10 @@ from lineproof.quantity import echo, internal_factor
 CLAIMED = ("claimed", "value")
 NAMES = ("id", "label", "symbol")
 _WORDS = re.compile(r"[a-z0-9]+")
+_GREEK = {
+    "α": "alpha", "β": "beta", "γ": "gamma", "δ": "delta", "ε": "eps", "θ": "theta",
+    "λ": "lambda", "μ": "mu", "ρ": "rho", "φ": "phi",
+}  # fmt: skip
 _MOST_PLACES = 6
 _LONGEST_WHERE = 40
 
@@ -156,7 +161,8 @@ class _Reader:
         if is_date(text):
             return f"; a spreadsheet made a date of it, so {DATE_ADVICE}"
         names = [*self.symbols, *(node.id for node in self.graph if node.has_value)]
-        near = difflib.get_close_matches(text[:80], names, n=3, cutoff=0.6)
+        alike = [symbol for symbol in self.symbols if _folded(symbol) == _folded(text[:80])]
+        near = alike or difflib.get_close_matches(text[:80], names, n=3, cutoff=0.6)
         return f"; write {' or '.join(map(repr, near))}" if near else "; take the id of a blank"
 
     # -- the value ---------------------------------------------------------------------------
@@ -175,6 +181,16 @@ class _Reader:
         return Claim(
             node.id, read.number, read.unit, read.value, stands_for, row.number, where, bars
         )
+
+
+def _folded(symbol: str) -> str:
+    """Return a symbol without what people write otherwise: capitals, marks, letters of Greek.
+
+    >>> _folded("φc"), _folded("phi_c"), _folded("Mᵣ"), _folded("f'c")
+    ('phic', 'phic', 'mr', 'fc')
+    """
+    plain = unicodedata.normalize("NFKC", symbol).lower()
+    return "".join(_GREEK.get(letter, letter) for letter in plain if letter.isalnum())
 
 
 def _words(text: str) -> list[str]:
