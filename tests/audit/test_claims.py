@@ -136,6 +136,11 @@ def test_symbols_not_known_get_the_nearest_names(graph: Graph, tmp_path: Path) -
     assert "'99.9' is not a line" in said
 
 
+def test_a_title_above_the_headings_is_named(graph: Graph, tmp_path: Path) -> None:
+    text = "Beam B1,,\n,,\nid,claimed,unit\nbeam/d,539,mm\n"
+    assert faults(graph, tmp_path, text) == ("row 3 holds the headings; delete the rows above it",)
+
+
 @pytest.mark.parametrize(
     ("text", "said"),
     [

@@ -26,6 +26,8 @@ _GREEK = {
     "α": "alpha", "β": "beta", "γ": "gamma", "δ": "delta", "ε": "eps", "θ": "theta",
     "λ": "lambda", "μ": "mu", "ρ": "rho", "φ": "phi",
 }  # fmt: skip
+_FIRST = 20
+"""So many rows are looked through for headings that stand below a title."""
 _MOST_PLACES = 6
 _LONGEST_WHERE = 40
 
@@ -43,6 +45,9 @@ def read_claims(graph: Graph, path: Path) -> tuple[Claim, ...]:
 def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, ...]:
     """Return the claims of a table that has been read; faults as :func:`read_claims`."""
     column = next((name for name in CLAIMED if name in table.headings), None)
+    lower = _headings_below(table)
+    if column is None and lower:
+        raise UserError(f"{table.name}: row {lower} holds the headings; delete the rows above it")
     if column is None:
         faults.add(f"{table.name}: row 1: no heading 'claimed'; write 'id,claimed,unit'")
     if not any(name in table.headings for name in NAMES):
@@ -59,6 +64,12 @@ def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, .
         faults.add(f"{table.name}: no row has a value in the column {column!r}; write one")
     faults.raise_if_any()
     return tuple(claim for claim in claims if claim is not None)
+
+
+def _headings_below(table: Table) -> int:
+    """Return the row that holds headings where a title stands above them; 0 for none."""
+    rows = (row for row in table.rows[:_FIRST] if {*row.cells.values()} & {*NAMES, *CLAIMED})
+    return next((row.number for row in rows), 0)
 
 
 @dataclass(frozen=True)
