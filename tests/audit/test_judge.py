@@ -59,6 +59,12 @@ def test_worked_from_rounded_values_agrees(record: Record) -> None:
     assert follows.high == pytest.approx(408_000 * (545 - 32.48925), rel=1e-4)
 
 
+def test_nothing_claimed_is_no_slip_of_units(record: Record) -> None:
+    """0 stands for -0.5 to 0.5, and 600 mm are 0.0006 km: that says nothing of a unit."""
+    said = verdicts(record, {"given/h": "0", "beam/d": "0", "strength/M_r": "0"})
+    assert list(said.values()) == [Verdict.INPUT, Verdict.ORIGIN, Verdict.ORIGIN]
+
+
 def test_values_in_other_units_agree(record: Record) -> None:
     """206.636 kN.m = 152.41 kip.ft; 538.95 mm = 21.218 in."""
     said = verdicts(record, {"beam/d": "21.22 in", "strength/M_r": "152.4 kip.ft"})

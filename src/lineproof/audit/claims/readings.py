@@ -45,7 +45,12 @@ _FARTHEST = 0.05
 
 
 def unit_slip(claim: Claim, follows: Iterable[Interval]) -> Slip | None:
-    """Return the slip of units that reproduces a claim from what follows, if there is one."""
+    """Return the slip of units that reproduces a claim from what follows, if there is one.
+
+    A number that stands for nothing as well, such as 0, is near any value in a unit large enough.
+    """
+    if claim.stands_for.holds(0.0):
+        return None
     sharp = [i for i in follows if i.middle and i.half <= _SHARP * abs(i.middle)]
     for factor, sentence in _factors(claim):
         scaled = claim.stands_for.times(1 / factor)
