@@ -4,13 +4,14 @@ from __future__ import annotations
 
 import csv
 import io
+import math
 from dataclasses import replace
 
 import pytest
 from tests.audit.hand import beam, typed
 
 from lineproof.audit.claims.judge import judge
-from lineproof.audit.data import Audit, Effect, Finding, Severity
+from lineproof.audit.data import Audit, Effect, Finding, Interval, Judged, Severity, Verdict
 from lineproof.audit.graph import Graph
 from lineproof.audit.report import audit_report, report_files, report_record
 from lineproof.audit.slips.search import find_slips
@@ -162,3 +163,15 @@ def test_the_page_of_a_report_offers_no_review_of_lines_that_it_has_not(audit: A
     assert "script-src 'none'" in page
     assert 'class="rv-open"' not in page
     assert 'type="module"' not in page
+
+
+def test_claims_that_lead_to_no_number_are_told_without_one() -> None:
+    """A depth of 1e-90 mm gives no finite number in places; the report prints all the same."""
+    record = beam()
+    graph = Graph(record)
+    claim = typed(graph, "strength/M_r", "207")
+    endless = Judged(claim.id, Verdict.ORIGIN, claim, Interval(math.nan, math.inf), 206.6e6)
+    made = report_record(Audit("H1", record.digest, (endless,), ()), record)
+    rows = next(p for p in made.parts if p["key"] == "judged")["entries"][0]["rows"]
+    assert rows[0][3] == "no value"
+    assert graph["strength/M_r"].number_text(math.inf) == "no value"

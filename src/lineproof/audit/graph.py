@@ -18,6 +18,8 @@ from lineproof.record.entry import CHECK, CRITERIA, FOUND, LINE, VALUES
 from lineproof.record.printing import ratio
 from lineproof.record.procedures import recall, run
 
+NO_VALUE = "no value"
+"""What is said of a value that is no finite number."""
 Number = float
 """A value in internal units: N, mm, MPa and what follows from them; angles in degrees."""
 
@@ -76,8 +78,11 @@ class Node:
     def number_text(self, value: Number, digits: int = 4) -> str:
         """Return a value of the line as a number in its printed unit, rounded to some digits.
 
-        An input is exact: 4 bars and 380 mm, not 4.000 bars and 380.0 mm.
+        An input is exact: 4 bars and 380 mm, not 4.000 bars and 380.0 mm. What absurd claims lead
+        to is no number.
         """
+        if not math.isfinite(value):
+            return NO_VALUE
         text = rounded_text(value / internal_factor(self.unit), digits)
         exact = not self.is_computed and "." in text and "e" not in text.lower()
         return text.rstrip("0").rstrip(".") if exact else text

@@ -23,7 +23,7 @@ from lineproof.audit.data import (
     Verdict,
 )
 from lineproof.audit.findings import named_clause
-from lineproof.audit.graph import Graph, Node
+from lineproof.audit.graph import NO_VALUE, Graph, Node
 from lineproof.audit.search.drawing import SOURCE as DRAWING
 from lineproof.audit.shared import shared_slips
 from lineproof.package import Package, build_package, to_html, to_pdf
@@ -288,6 +288,8 @@ def _judged_rows(judged: Iterable[Judged], graph: Graph) -> Iterator[list[str]]:
 
 def _interval(interval: Interval, node: Node) -> str:
     ends = dict.fromkeys(node.number_text(value) for value in (interval.low, interval.high))
+    if NO_VALUE in ends:
+        return NO_VALUE
     return f"{' to '.join(map(number_text, ends))} {unit_text(node.unit)}".rstrip()
 
 
