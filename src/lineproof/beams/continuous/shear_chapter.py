@@ -3,22 +3,19 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import Any
 
 from lineproof.beams.continuous.bars_counted import record_area
 from lineproof.beams.continuous.bearing import (
     hangers_needed,
-    largest_reaction,
     record_bearing,
     record_hangers,
 )
-from lineproof.beams.continuous.case_forces import factor_text, record_forces
+from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
 from lineproof.beams.continuous.faces import faces_of, has_sag, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
-from lineproof.beams.continuous.groups import Group, groups_of
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.interface import (
     beside_hog,
@@ -29,7 +26,8 @@ from lineproof.beams.continuous.interface import (
     record_restrained_length,
 )
 from lineproof.beams.continuous.layout import Face
-from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model
+from lineproof.beams.continuous.model import GIVEN, Model
+from lineproof.beams.continuous.reaction_record import record_reaction
 from lineproof.beams.continuous.restraint import SHARES
 from lineproof.beams.continuous.shear_depths import (
     depth_of_bars,
@@ -42,7 +40,6 @@ from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.shear_stretches import BarsOver, bars_over
 from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.continuous.support_turning import record_support_torques
-from lineproof.beams.continuous.symbols import stated
 from lineproof.beams.continuous.torsion_inputs import corner_bar
 from lineproof.beams.continuous.torsion_record import record_span_torsion
 from lineproof.beams.steps import Steps
@@ -207,70 +204,12 @@ def _record_supports(design: Design, alike: Mapping[str, Entry]) -> None:
         with model.sheet.part(f"support-{number}", f"Support {number}: {title}"):
             steps = Steps(model.sheet, dict(alike))
             restrained = number in design.designed.restrained
-            R_f = _record_reaction(steps, model, number, restrained=restrained)
+            R_f = record_reaction(steps, model, number, restrained=restrained)
             if hung:
                 record_hangers(steps, hangers_needed(design.stirrups.basis, R_f.value))
             else:
                 steps.bind(l_b=model.sheet.entry(f"{GIVEN}/b_s{number}"))
                 record_bearing(steps)
-
-
-def _record_reaction(steps: Steps, model: Model, support: int, *, restrained: bool) -> Entry:
-    """Record the largest factored reaction of a support inside the open part, and bind it.
-
-    With ``restrained``, what the assumed moment of restraint adds is counted.
-    """
-    row, R = largest_reaction(model.forces, support)
-    sheet, case = steps.sheet, model.forces.cases[row]
-    held = _restraint_at(model, support) if restrained else {}
-    if model.inputs.forces_file is not None:
-        return _given_reaction(steps, R, f"frame analysis, {case}", held)
-    entries = sheet.entries_of(ANALYSIS)
-    factors = model.forces.factors_of(row)
-    terms: list[str] = []
-    bound: dict[str, Any] = {}
-    for group in groups_of(model):
-        name = f"R_{support}{group.code}"
-        factor = _factor(factors, group)
-        if factor and name in entries:
-            bound[name] = entries[name]
-            terms.append(f"{factor_text(factor)}*{name}")
-    if model.inputs.redistribution:
-        return _given_reaction(steps, R, f"after redistribution, {case}", held)
-    if held:
-        bound |= held
-        terms.append(_ADDED)
-    made = sheet.line(
-        stated(f"R_f = {' + '.join(terms)}"), title=f"Largest factored reaction: {case}", **bound
-    )
-    steps.bind(R_f=made)
-    return made
-
-
-_ADDED = "M_f/l"
-
-
-def _restraint_at(model: Model, support: int) -> dict[str, Any]:
-    """Return the assumed moment of restraint of an end support and the span it acts on."""
-    span, side = (support, "right") if support == 1 else (support - 1, "left")
-    M_f = model.sheet.entry(f"hog-{support}-{side}/M_f")
-    return {"M_f": M_f, "l": model.lengths[span - 1]}
-
-
-def _given_reaction(steps: Steps, R: float, source: str, held: Mapping[str, Any]) -> Entry:
-    """Record a reaction that is known as a number, and what a restraint adds; bind it."""
-    sheet = steps.sheet
-    made = sheet.given("R_fa" if held else "R_f", f"{R / 1000:.12g} kN", source=source)
-    if held:
-        title = "Largest factored reaction, with the restraint assumed"
-        made = sheet.line(stated(f"R_f = R_fa + {_ADDED}"), title=title, R_fa=made, **held)
-    steps.bind(R_f=made)
-    return made
-
-
-def _factor(factors: Mapping[tuple[str, int], float], group: Group) -> float:
-    spans = [f for (kind, span), f in factors.items() if group.holds(kind, span)]
-    return spans[0] if spans else 0.0
 
 
 def _record_interfaces(design: Design) -> None:

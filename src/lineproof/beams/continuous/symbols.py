@@ -52,6 +52,7 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
         (r"x_[ijs]", "m"),
         (r"[MT]_[ij]", "kN.m"),
         (r"V_[ij](e|\d+)?", "kN"),
+        (r"M_q\d+[lr]", "kN.m"),
         (r"M_max|M_all", "kN.m"),
         (r"V_max", "kN"),
     )
