@@ -167,17 +167,20 @@ def test_recorded_lengths_are_the_numbers(expression: str, shape: str) -> None:
     assert list(faults(sheet.close().data)) == []
 
 
-def test_ties_earn_nothing_where_top_bars_stand_in_the_overhangs() -> None:
-    """Check 12b without the factor 0.8: 426 mm; the ties stay."""
+def test_ties_earn_nothing_for_bars_in_the_overhangs_alone() -> None:
+    """Check 12b without the factor 0.8: 426 mm; bars of the web beside them keep it: 340.8 mm."""
     bare = beam_of(*ONE)
     top = SupportTop((BarLayer(2, "25M"),), 2)
     spread = replace(bare, bars=SectionBars((), (top, SupportTop()), "15M"))
-    assert hook_at(spread, 1, "25M").l_dh == pytest.approx(425.96, abs=0.1)
-    assert hook_at(spread, 1, "25M").tied
-    assert hook_at(spread, 2, "25M").l_dh == pytest.approx(0.8 * 425.96, abs=0.1)
-    assert hook_at(bare, 1, "25M", spread=True).l_dh == pytest.approx(425.96, abs=0.1)
+    assert hook_at(spread, 1, "25M", outside=True).l_dh == pytest.approx(425.96, abs=0.1)
+    assert hook_at(spread, 1, "25M").l_dh == pytest.approx(0.8 * 425.96, abs=0.1)
     sheet = sheet_of(spread)
     with sheet.part("hook", "Hook"):
-        place = record_hook(writers_of(sheet, spread), {}, 1, "25M", 75.0)
+        place = record_hook(writers_of(sheet, spread), {}, 1, "25M", 75.0, outside=True)
         assert place["l_dh"].value == pytest.approx(425.96, abs=0.1)
         assert place["k_ht"].value == 1.0
+    with sheet.part("web", "Hook"):
+        place = record_hook(writers_of(sheet, spread), {}, 1, "25M", 75.0)
+        assert place["l_dh"].value == pytest.approx(0.8 * 425.96, abs=0.1)
+    assert "hook-ties" not in sheet.entries_of("hook")
+    assert sheet.entries_of("web")["hook-ties"].value == (75.0, pytest.approx(75.6))

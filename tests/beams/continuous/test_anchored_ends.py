@@ -88,9 +88,9 @@ def test_area_of_straight_bottom_bars_by_hand() -> None:
     ("support", "top", "part"),
     [
         (1, TopBars(BarLayer(2, "15M"), 0, 2), 1.0),
-        (1, TopBars(BarLayer(2, "15M"), 1, 2), 250 / 282.9),
+        (1, TopBars(BarLayer(2, "15M"), 1, 2), (1 + 250 / 282.9) / 2),
         (1, TopBars(BarLayer(2, "20M"), 0, 2), 250 / 275.8),
-        (1, TopBars(BarLayer(2, "25M"), 1, 2), 250 / 445.5),
+        (1, TopBars(BarLayer(2, "25M"), 1, 2), (250 / 356.4 + 250 / 445.5) / 2),
         (1, TopBars(BarLayer(2, "35M"), 0, 2), 250 / (1.3 * 0.45 * 400 / math.sqrt(32) * 35.7)),
         (2, TopBars(BarLayer(2, "35M"), 0, 2), 1.0),
     ],
@@ -98,10 +98,10 @@ def test_area_of_straight_bottom_bars_by_hand() -> None:
 def test_part_of_top_bars_that_counts_by_hand(support: int, top: TopBars, part: float) -> None:
     """A girder of 300 mm at the end, bars that end 50 mm before its outer face: l_av = 250 mm.
 
-    Hooks, 100 d_b/sqrt(32): 15M 282.9, 20M 344.8, 25M 445.5 mm; of bars within the web alone with
-    ties, 0.8 of it: 15M 226.3, 20M 275.8. 8 diameters of 35M are 285.6 mm, more than that: these
-    end straight, as top bars over more than 300 mm of concrete (12.2.4), with minimum stirrups.
-    An inner girder is run through.
+    Hooks, 100 d_b/sqrt(32): 15M 282.9, 25M 445.5 mm in the overhangs; of bars within the web with
+    ties, 0.8 of it: 15M 226.3, 20M 275.8, 25M 356.4. 8 diameters of 35M are 285.6 mm, more than
+    that: these end straight, as top bars over more than 300 mm of concrete (12.2.4), with minimum
+    stirrups. An inner girder is run through.
     """
     bare = bare_of(spans=["5 m", "5 m"], supports=["girder 300 mm"] * 3)
 
@@ -136,22 +136,22 @@ def test_beams_on_narrow_girders_and_columns_are_designed(inputs: dict[str, Any]
 
 
 def test_a_section_counts_its_top_bars_as_far_as_their_hooks_are_developed() -> None:
-    """Girders of 300 mm: of the top bars 15M, A_sd = A_s x 250/282.9 carry the moment by hand.
+    """Girders of 300 mm: 15M in the overhangs count by 250/282.9, in the web (226.3) in full.
 
     f_c = 32 MPa, alpha_1 = 0.85 - 0.0015 x 32 = 0.802, b_w = 400, d = 520 - 41.3 - 8 = 470.7 mm.
     """
     record = flow.record_of(**NARROW[0])
     section, part = (f"hog-1-right{tail}" for tail in ("", "-developed"))
-    whole = record.entries[f"{part}/A_s"]["value"]
-    A_sd = whole * 250 / 282.9
+    web, beside = (200 * record.entries[f"{part}/{n}"]["value"] for n in ("n_1", "n_2"))
+    A_sd = web + beside * 250 / 282.9
     a = 0.85 * A_sd * 400 / (0.802 * 0.65 * 32 * 400)
 
-    assert whole == 200 * record.entries[f"{part}/n_b"]["value"]
-    assert record.entries[f"{part}/A_sd"]["value"] == pytest.approx(A_sd, rel=1e-6)
+    assert record.entries[f"{part}/A_s"]["value"] == pytest.approx(A_sd, rel=1e-6)
     assert record.entries[f"{section}/M_r"]["value"] == pytest.approx(
         0.85 * A_sd * 400 * (470.7 - a / 2) / 1e6, rel=1e-6
     )
-    assert record.entries["anchorage-end-1-hook-15m/hook-in-part"]["holds"]
+    assert not record.entries["anchorage-end-1-hook-15m/hook-in-part"]["holds"]
+    assert record.entries["anchorage-end-1-hook-15m-overhang/hook-in-part"]["holds"]
     assert record.entries["anchorage-end-1-hook-15m/hook-least-length"]["holds"]
 
 

@@ -27,9 +27,13 @@ def test_ties_do_not_hold_hooks_outside_them(beam: ContinuousBeam) -> None:
     """2-20M within the web are tied, 2-20M in the overhangs are not: the page says both."""
     there = [(r.number, r.place) for r in beam.design.runs if r.hook_start and r.face == "top"]
     assert sorted(there) == [(2, "overhang"), (2, "web")]
-    made = beam.sheet.entries_of("anchorage-end-1-hook-20m")
-    assert str((made["hook-ties"].extra or {})["title"]).startswith("Ties around the hooks within")
-    assert "NOT tied here" in str(made["ties-in-joint"].source)
+    web = beam.sheet.entries_of("anchorage-end-1-hook-20m")
+    assert str((web["hook-ties"].extra or {})["title"]).startswith("Ties around the hooks within")
+    beside = beam.sheet.entries_of("anchorage-end-1-hook-20m-overhang")
+    assert "NOT tied here" in str(beside["ties-in-joint"].source)
+    assert "hook-ties" not in beside
+    assert "ties-in-joint" not in web
+    assert beside["l_dh"].value * 0.8 == pytest.approx(web["l_dh"].value)
 
 
 def test_girders_are_told_what_their_joints_need(beam: ContinuousBeam) -> None:

@@ -61,6 +61,7 @@ class Walk:
         """Return the recorded development length of a hook."""
         last = len(self.beam.inputs.supports)
         key = f"anchorage-end-{1 if end == 'start' else last}-hook-{run.size.lower()}"
+        key += "-overhang" if run.place == "overhang" else ""
         return self.value(f"{key}/l_dh")
 
     def distance(self, run: BarRun, runs: tuple[BarRun, ...], x: float) -> float:

@@ -217,19 +217,10 @@ def side_cover(designed: Designed, support: int) -> float:
     return value(cover.COVER_TO_BARS, **given)
 
 
-def in_overhang(designed: Designed, support: int) -> bool:
-    """Tell whether top bars of a support stand in the overhangs, outside the stirrups."""
-    tops = designed.bars.top
-    return bool(tops) and tops[support - 1].overhang > 0
-
-
-def hook_at(
-    designed: Designed, support: int, size: str, *, spread: bool | None = None
-) -> HookLength:
+def hook_at(designed: Designed, support: int, size: str, *, outside: bool = False) -> HookLength:
     """Return the hook of a bar at an end of the beam.
 
-    ``spread`` says whether top bars may stand in the overhangs, where they are not chosen yet:
-    outside the stirrups ties earn nothing.
+    ``outside`` says that the bar stands in an overhang, where the ties of the web earn it nothing.
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     s = designed.strengths
@@ -244,7 +235,6 @@ def hook_at(
     side = holds(hooks.SIDE_COVERED, c_side=c_side)
     reduced = side and holds(hooks.TAIL_COVERED, c_tail=c_tail) and holds(laps.LAPPABLE, d_b=d_b)
     tied = not (side and holds(hooks.FACE_COVERED, c_top=c_top))
-    outside = in_overhang(designed, support) if spread is None else spread
     ties = TIED_ROW if tied and not outside else UNTIED_ROW
     l_hb = value(basic, d_b=d_b, f_c=s.f_c, f_y=s.f_y)
     l_dh = value(
@@ -263,9 +253,12 @@ def tie_spacing(d_b: float) -> float:
 
 
 def ties_at(designed: Designed, runs: Iterable[BarRun], support: int) -> float:
-    """Return the spacing of the ties around all hooks in an end support; 0 where none are [mm]."""
+    """Return the spacing of the ties around the hooks of the web in an end support [mm].
+
+    0 where none are. Hooks in the overhangs stand outside them.
+    """
     name = "hook_start" if support == 1 else "hook_end"
-    sizes = {run.size for run in runs if getattr(run, name)}
+    sizes = {run.size for run in runs if getattr(run, name) and not run.outside}
     found = [hook_at(designed, support, size) for size in sizes]
     return min((hook.s_tie for hook in found if hook.tied), default=0.0)
 
@@ -290,7 +283,7 @@ def hook_leg_fits(designed: Designed, support: int, size: str) -> bool:
     return hook_leg(size, WIDEST_BENDS) <= depth - 2 * (outline.cover + d_bs)
 
 
-def hook_part(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> float:
+def hook_part(designed: Designed, support: int, size: str, *, outside: bool = False) -> float:
     """Return the part of the strength of bars that their hooks develop at the inner face.
 
     0 where a hook has no room in the depth or not its least length, below which no steel in excess
@@ -303,9 +296,9 @@ def hook_part(designed: Designed, support: int, size: str, *, spread: bool | Non
     l_av = available(designed, support)
     if not holds(hooks.FITS, d_b=BARS.number(size, "d_b"), l_av=l_av):
         return 0.0
-    return min(l_av / hook_at(designed, support, size, spread=spread).l_dh, 1.0)
+    return min(l_av / hook_at(designed, support, size, outside=outside).l_dh, 1.0)
 
 
-def fits_hook(designed: Designed, support: int, size: str, *, spread: bool | None = None) -> bool:
+def fits_hook(designed: Designed, support: int, size: str, *, outside: bool = False) -> bool:
     """Tell whether a hook of a size has room in the depth and is developed at the inner face."""
-    return hook_part(designed, support, size, spread=spread) >= 1
+    return hook_part(designed, support, size, outside=outside) >= 1

@@ -17,7 +17,6 @@ from lineproof.beams.continuous.anchorage import (
     UNTIED_ROW,
     Bar,
     bar_of,
-    in_overhang,
     room_beside,
     sides_of,
     tie_spacing,
@@ -36,9 +35,7 @@ from lineproof.standards.a23_3.bars import BARS, STIRRUP_BENDS
 BY_TABLE = "The development length is that of the table; the general expression stands beside it."
 BY_GENERAL = "The development length is that of the general expression; the table stands beside it."
 
-_OUTSIDE = (
-    "Top bars stand in the overhangs here, outside the stirrups: the factor for ties is not used."
-)
+_OUTSIDE = "In the overhangs bars stand outside the ties: the factor for ties is not used."
 TIED_IN_WEB = "Ties around the hooks within the web, of small cover where the beam ends"
 TIES_IN_JOINT = (
     "The hooks of the bars in the overhangs stand outside the ties of the beam and are NOT tied "
@@ -248,12 +245,13 @@ def record_hook(
     support: int,
     size: str,
     ties: float,
-    bent: Sequence[BarRun] = (),
+    *,
+    outside: bool = False,
 ) -> dict[str, Entry]:
     """Record inside the open part the hook of a bar at an end of the beam, with its checks.
 
     ``ties`` is the spacing at which ties are laid around all hooks of the web at the support [mm];
-    ``bent`` are the bars of the size that are hooked there.
+    ``outside`` says that the bars stand in the overhangs, outside these ties.
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     sheet, designed = writers.sheet, writers.designed
@@ -275,26 +273,24 @@ def record_hook(
     face = steps.decide(hooks.FACE_COVERED)
     tied = not (side and face)
     reduced = bool(side and tail) and steps.holds(laps.LAPPABLE)
-    spread = in_overhang(designed, support)
-    if tied and spread:
+    if tied and outside:
         sheet.note("outside", _OUTSIDE, title="Ties around the hooks", clause="12.5.3")
-    _record_hook_factors(steps, designed, reduced=reduced, tied=tied and not spread)
+    _record_hook_factors(steps, designed, reduced=reduced, tied=tied and not outside)
     steps.lines(basic, hooks.L_DH)
     if tied:
-        _record_ties(steps, ties, bent)
+        _record_ties(steps, designed, ties, outside=outside)
     return steps.place
 
 
-def _record_ties(steps: Steps, ties: float, bent: Sequence[BarRun]) -> None:
+def _record_ties(steps: Steps, designed: Designed, ties: float, *, outside: bool) -> None:
     """Record the ties around hooks of the web; those of the overhangs are left to the joint."""
-    beside = any(run.place == "overhang" for run in bent)
-    if not beside or any(run.place == "web" for run in bent):
-        steps.bind(s_tie=steps.sheet.given("s_tie", plain(ties, "mm"), source="as laid"))
-        steps.check(hooks.TIED, title=TIED_IN_WEB if beside else "")
-        steps.check(hooks.TIES_CLEAR, a_max=steps.sheet.find("a_max"))
-    if beside:
+    if outside:
         text = TIES_IN_JOINT.format(tie_spacing(steps.entry("d_b").value))
         steps.sheet.note("ties-in-joint", text, title="Hooks in the overhangs", clause="12.5.4")
+        return
+    steps.bind(s_tie=steps.sheet.given("s_tie", plain(ties, "mm"), source="as laid"))
+    steps.check(hooks.TIED, title=TIED_IN_WEB if sides_of(designed.outline) else "")
+    steps.check(hooks.TIES_CLEAR, a_max=steps.sheet.find("a_max"))
 
 
 def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, tied: bool) -> None:

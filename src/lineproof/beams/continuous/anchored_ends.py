@@ -52,22 +52,22 @@ def top_part(bare: Designed, support: int, top: TopBars) -> float:
     if not bare.exterior(support):
         return 1.0
     size, h, beside = top.web.size, _depth(bare, support), top.sides * top.overhang
-    hooked = hook_part(bare, support, size, spread=beside > 0)
     area = 0.0
     for number, layer in enumerate(top.layers, start=1):
         web = Bar("top", "web", number, size, spaced(layer.number), h)
-        area += layer.area * _counted(bare, support, web, hooked)
+        area += layer.area * _counted(bare, support, web)
     if beside:
         room = room_beside(bare, [1 if support == 1 else len(bare.outline.lengths)])
         spread = Bar("top", "overhang", 1, size, beside, h, room)
         in_overhangs = top.area - sum(layer.area for layer in top.layers)
-        area += in_overhangs * _counted(bare, support, spread, hooked)
+        area += in_overhangs * _counted(bare, support, spread)
     return area / top.area
 
 
-def _counted(bare: Designed, support: int, bar: Bar, hooked: float) -> float:
+def _counted(bare: Designed, support: int, bar: Bar) -> float:
     """Return the part of a top bar that counts: straight where it develops so, else by its hook."""
     straight = _straight(bare, support, bar)
+    hooked = hook_part(bare, support, bar.size, outside=bar.place == "overhang")
     return straight if straight >= 1 or hooked == 0 else hooked
 
 
@@ -77,7 +77,7 @@ def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
     Nor where one would develop nothing; nor where it is not developed in full and no moment stands:
     the end is free to rotate, no restraint is assumed.
     """
-    part = hook_part(designed, support, run.size)
+    part = hook_part(designed, support, run.size, outside=run.outside)
     if part == 0 or development_length(designed, run) <= available(designed, support):
         return ""
     simple = designed.outline.supports[support - 1].kind == "simple"

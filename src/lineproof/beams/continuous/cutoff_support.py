@@ -38,9 +38,13 @@ from lineproof.standards.a23_3 import cutoff as clause
 from lineproof.standards.a23_3 import development, hooks, shear, shear_bars, torsion
 from lineproof.standards.references import MECHANICS
 
-Hooks = Mapping[tuple[int, str], Entry]
-"""Recorded development lengths of hooks by support number and bar size."""
+HookKey = tuple[int, str, bool]
+"""Support number, bar size, whether in the overhangs: hooks of one kind."""
+Hooks = Mapping[HookKey, Entry]
+"""Recorded development lengths of hooks."""
 
+OUTSIDE = "-overhang"
+"""Ending of the key of a part on hooks in the overhangs."""
 NOT_ZERO = "no-zero-moment"
 """Key of the note that no point of inflection stands near a support."""
 _NOT_ZERO = (
@@ -166,7 +170,7 @@ def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
         steps.line(clause.PAST_CENTRE)
         _, confined = support_shear(designed, side.span, side.near)
         steps.line(clause.LIMIT_CONFINED if confined else clause.LIMIT)
-        lengths = [hooked[support, r.size] for r in side.kept if _hook(r, side.near)]
+        lengths = [hooked[hook_key(support, r)] for r in side.kept if _hook(r, side.near)]
         straight = tuple(r for r in side.kept if not _hook(r, side.near))
         lengths += [site.longest(straight)["l_d"]] if straight else []
         longest = max(lengths, key=lambda e: e.value)
@@ -223,21 +227,29 @@ def record_restrained_end(site: Site) -> None:
 
 def record_hooks(writers: Writers, runs: Runs) -> Hooks:
     """Record every kind of hook at the ends of the beam in a part, with whether it fits."""
-    made: dict[tuple[int, str], Entry] = {}
+    made: dict[HookKey, Entry] = {}
     designed, sheet = writers.designed, writers.sheet
     last = len(designed.outline.supports)
     for support, name in ((1, "hook_start"), (last, "hook_end")):
         ties = ties_at(designed, runs, support)
-        for size in sorted({run.size for run in runs if getattr(run, name)}):
-            key = f"anchorage-end-{support}-hook-{size.lower()}"
-            with sheet.part(key, f"Hooks of bars {size} at support {support}"):
-                bent = [run for run in runs if run.size == size and getattr(run, name)]
-                place = record_hook(writers, {}, support, size, ties, bent)
-                made[support, size] = place["l_dh"]
+        bent = [run for run in runs if getattr(run, name)]
+        for kind in sorted({hook_key(support, run) for run in bent}):
+            _, size, outside = kind
+            key = f"anchorage-end-{support}-hook-{size.lower()}{OUTSIDE if outside else ''}"
+            where = " in the overhangs" if outside else ""
+            with sheet.part(key, f"Hooks of bars {size}{where} at support {support}"):
+                place = record_hook(writers, {}, support, size, ties, outside=outside)
+                made[kind] = place["l_dh"]
                 if designed.held(support):
-                    beyond = _beyond(writers, support, bent)
+                    same = [run for run in bent if hook_key(support, run) == kind]
+                    beyond = _beyond(writers, support, same)
                     _record_fit(writers, Steps(sheet, place), support, beyond)
     return made
+
+
+def hook_key(support: int, run: BarRun) -> HookKey:
+    """Return which kind of hook a run has at an end support."""
+    return support, run.size, run.outside
 
 
 def _record_fit(writers: Writers, steps: Steps, support: int, c_end: float) -> None:
@@ -263,7 +275,9 @@ def record_end_bottom(site: Site, hooked: Hooks) -> None:
         rows = []
         half = half_of(designed, side.span, side.near)
         for run in side.kept:
-            needed = hooked[support, run.size] if _hook(run, side.near) else site.bar(run)["l_d"]
+            needed = (
+                hooked[hook_key(support, run)] if _hook(run, side.near) else site.bar(run)["l_d"]
+            )
             (group,) = grouped(writers, (run,))
             l_av = half - distance(designed, side.span, side.near, tip(run, side.near))
             rows.append((group, l_av, needed))

@@ -107,8 +107,7 @@ def _anchors(designed: Designed, support: int, run: BarRun) -> bool:
     """Tell whether top bars of another support are developed in an end support."""
     if development_length(designed, run) <= available(designed, support):
         return True
-    spread = run.place == "overhang"
-    return fits_hook(designed, support, run.size, spread=spread)
+    return fits_hook(designed, support, run.size, outside=run.outside)
 
 
 def others_through(designed: Designed, rows: Mapping[int, Sequence[BarRun]]) -> list[BarRun]:

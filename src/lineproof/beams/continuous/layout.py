@@ -97,6 +97,11 @@ class BarRun:
     mark: str = ""
 
     @property
+    def outside(self) -> bool:
+        """Whether they stand in the overhangs, outside the stirrups and ties of the web."""
+        return self.place == "overhang"
+
+    @property
     def area(self) -> float:
         """Area of all its bars [mm2]."""
         return self.number * BARS.number(self.size, "A_b")

@@ -176,6 +176,10 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
     ends = {i: kept[i].end - kept[j].start for i, j in pairs}
     starts = {j: kept[i].end - kept[j].start for i, j in pairs}
     last = len(designed.outline.supports)
+
+    def hook(support: int, run: BarRun) -> float:
+        return hook_at(designed, support, run.size, outside=run.outside).l_dh
+
     made = []
     for index, run in enumerate(kept):
         bar = develop(designed.basis, bar_of(designed, run))
@@ -185,8 +189,8 @@ def stand(designed: Designed, runs: Iterable[BarRun]) -> tuple[Standing, ...]:
         made.append(
             Standing(
                 run,
-                hook_at(designed, 1, run.size).l_dh if run.hook_start else rise_start,
-                hook_at(designed, last, run.size).l_dh if run.hook_end else rise_end,
+                hook(1, run) if run.hook_start else rise_start,
+                hook(last, run) if run.hook_end else rise_end,
                 distance_of(designed, run), lap_start, lap_end,
                 lap_start and starts[index] >= bar.lap * WHOLE,
                 lap_end and ends[index] >= bar.lap * WHOLE,

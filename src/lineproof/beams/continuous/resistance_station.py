@@ -18,7 +18,7 @@ from lineproof.beams.continuous.cutoff_sets import (
     record_developed,
     record_resistance,
 )
-from lineproof.beams.continuous.cutoff_support import Hooks, record_section
+from lineproof.beams.continuous.cutoff_support import Hooks, hook_key, record_section
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.resistance import Standing, top_layers
@@ -188,7 +188,7 @@ def _available(laid: Laid, bars: Standing, x: float) -> tuple[float, Entry]:
     )
     length, rise, hook, lap, support = min(ends, key=lambda end: end[0] / end[1])
     if hook:
-        return length, laid.hooked[support, bars.run.size]
+        return length, laid.hooked[hook_key(support, bars.run)]
     if lap and length < rise and rise > recorded["l_s"].value:
         return length, _overlap(writers.sheet, rise)
     short = lap and length < recorded["l_s"].value  # else developed in full by either length

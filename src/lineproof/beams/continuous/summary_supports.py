@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.anchorage import tie_spacing
+from lineproof.beams.continuous.cutoff_support import OUTSIDE
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.model import ANALYSIS, Model
 from lineproof.beams.continuous.summary_tables import NONE, Row, printed
@@ -78,7 +79,7 @@ def _hooks(design: Design, number: int) -> Iterator[Row]:
     head = f"anchorage-end-{number}-hook-"
     for part in design.model.sheet.parts:
         if part.key.startswith(head) and "ties-in-joint" in part.entries:
-            size = part.key.removeprefix(head).upper()
+            size = part.key.removeprefix(head).removesuffix(OUTSIDE).upper()
             text = (
                 f"ties around the hooks of the top bars {size} in the overhangs, at most "
                 f"{tie_spacing(BARS.number(size, 'd_b')):g} mm apart"
