@@ -62,6 +62,26 @@ def test_the_same_rounding_is_one_where_no_slip_gives_it() -> None:
     assert said_of(shear(), {"beam/V_f": "120"}, "beam/V_f", None)[0] is Verdict.UNSAFE_ROUNDING
 
 
+@pytest.mark.parametrize(
+    ("spans", "expected"), [(1, Verdict.UNSAFE_ROUNDING), (2, Verdict.DOUBTFUL)]
+)
+def test_beside_a_rounding_to_the_unsafe_side_another_place_is_asked_about(
+    spans: int, expected: Verdict
+) -> None:
+    """Span 2: 40.3 x 5.945/2 = 119.8 kN, which is 120 to three digits as well."""
+    sheet = sheet_of({"V_f = w_f*l/2": "kN"}, CLEAR | {"l_n": "5.4 m", "l_2": "5.945 m"})
+    if spans > 1:
+        with sheet.part("next", "Span 2: by hand"):
+            sheet.line("V_f = w_f*l_2/2", unit="kN")
+    with sheet.part("checks", "Span 1: checks"):
+        shear = sheet.entry("beam/V_f")
+        sheet.check("V_f <= V_r", key="shear", title="Shear resistance", V_f=shear)
+    verdict, note = said_of(sheet.close(), {"beam/V_f": "120"}, "beam/V_f")
+    assert verdict is expected
+    assert note.startswith("120.90 kN rounded down to a step of 1 kN: not conservative")
+    assert (" = 119.8 kN written in this row" in note) is (spans > 1)
+
+
 def test_a_slip_that_is_no_rounding_stays_an_origin() -> None:
     assert said_of(shear(), {"beam/V_f": "119.9"}, "beam/V_f")[0] is Verdict.ORIGIN
 

@@ -16,21 +16,37 @@ _SAME = 1e-6
 
 
 def plausible(
-    graph: Graph, slips: Sequence[Slip], claim: Claim, way: Other | None = None
+    graph: Graph,
+    slips: Sequence[Slip],
+    claim: Claim,
+    way: Other | None = None,
+    *,
+    places: bool = False,
 ) -> tuple[Slip, Cause] | None:
     """Return the likeliest slip that gives a claim to its last digit, and which of its causes.
 
     None if there is none. Only mistakes that a checker knows by name count, made in the line
     itself: of slips that have as many ways as a number has digits, a place other quantities, or a
     calc unclaimed lines, one fits most numbers. Nor does what is nothing but the other ``way``,
-    which puts its own values, or a copy of what is the same number by rights.
+    which puts its own values, or a copy of what is the same number by rights. The same quantity of
+    another place counts where ``places`` is true: beside a reading to the unsafe side.
     """
+
+    def known(cause: Cause) -> bool:
+        return cause.usual or (places and _is_elsewhere(graph, cause))
+
     exact = (slip for slip in slips if claim.stands_for.holds(slip.value))
     pairs = ((slip, cause) for slip in exact for cause in slip.causes)
     return next(
-        (p for p in pairs if p[1].usual and not _is_same(graph, p[1], claim) and _counts(*p, way)),
+        (p for p in pairs if known(p[1]) and not _is_same(graph, p[1], claim) and _counts(*p, way)),
         None,
     )
+
+
+def _is_elsewhere(graph: Graph, cause: Cause) -> bool:
+    """Tell whether the same quantity of another place was taken."""
+    both = cause.took in graph.stored and cause.replaced in graph.stored
+    return both and graph[cause.took].symbol == graph[cause.replaced].symbol
 
 
 def _is_same(graph: Graph, cause: Cause, claim: Claim) -> bool:

@@ -292,15 +292,21 @@ class _Judge:
                 safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
                 if rounded.usual or safe:
                     said = self._rounded(node, claim, judged, rounded, safe=safe)
-                    return self._beside_a_slip(node, claim, said)
+                    return self._beside_a_slip(node, claim, said, places=safe is False)
         return None
 
     def _beside_a_slip(
-        self, node: Node, claim: Claim, read: Judged, way: Other | None = None
+        self,
+        node: Node,
+        claim: Claim,
+        read: Judged,
+        way: Other | None = None,
+        *,
+        places: bool = False,
     ) -> Judged:
         """Judge a line with a reading that is no error: doubtful where a slip is likely as well."""
         slips = self._slips(node, claim)
-        found = plausible(self.graph, slips, claim, way)
+        found = plausible(self.graph, slips, claim, way, places=places)
         if found is None:
             return replace(read, slips=slips if read.verdict in WRONG else ())
         slip, cause = found
