@@ -61,7 +61,11 @@ def pairs(graph: Graph, number: int, seed: int = 0) -> Iterator[Sheet]:
         other = draw.choice(near or worked)
         if not _disjoint(pen, other):
             continue
-        yield sheet_with(graph, [other, pen])
+        sheet = sheet_with(graph, [other, pen])
+        # By chance both may make up for each other where they are written: then no number there
+        # is wrong, and whoever reads it as right finds the next line to be the origin.
+        if sheet.planted[-1].beyond or not other.beyond:
+            yield sheet
 
 
 def _disjoint(first: Planted, second: Planted) -> bool:
