@@ -18,6 +18,8 @@ from lineproof.standards.nbc.loads import USES
 
 Shape = Literal["T", "L", "rectangular"]
 SHAPES = ("T", "L", "rectangular")
+OVERHANGS: Mapping[Shape, int] = {"T": 2, "L": 1, "rectangular": 0}
+"""Number of overhangs of the slab by the shape of a section."""
 ENDS = ("free", "cast with a girder", "cast with a column")
 SNOWED_ON = ("roof", "exterior balcony")
 LEAST_NORMAL = 2150.0

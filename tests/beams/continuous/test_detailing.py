@@ -14,7 +14,7 @@ from lineproof.beams.continuous.anchorage import hook_at
 from lineproof.beams.continuous.cutoff import Frame, zone_at
 from lineproof.beams.continuous.cutoff_ends import bottom_side, passes, top_side
 from lineproof.beams.continuous.cutoff_need import need_of
-from lineproof.beams.continuous.detailing import beside_ties, hook_ties, lay_bars
+from lineproof.beams.continuous.detailing import lay_bars
 from lineproof.beams.continuous.detailing_bottom import lay_bottom
 from lineproof.beams.continuous.detailing_data import (
     Designed,
@@ -24,6 +24,7 @@ from lineproof.beams.continuous.detailing_data import (
 )
 from lineproof.beams.continuous.detailing_holders import with_holders
 from lineproof.beams.continuous.detailing_record import record_detailing
+from lineproof.beams.continuous.detailing_ties import beside_ties, hook_ties
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, StirrupZone
 from lineproof.beams.continuous.resistance import in_line, lap_pairs, stand
 from lineproof.beams.continuous.resistance_cover import covered

@@ -13,6 +13,7 @@ from lineproof.beams.continuous import numbers
 from lineproof.beams.continuous.bending import hook_leg
 from lineproof.beams.continuous.detailing_data import Basis, Designed
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
+from lineproof.beams.inputs import OVERHANGS
 from lineproof.formula import Criterion, Formula
 from lineproof.standards.a23_3 import bars as bar_clause
 from lineproof.standards.a23_3 import cover, development, hooks, laps
@@ -76,7 +77,7 @@ class Development:
 
 def sides_of(outline: BeamOutline) -> int:
     """Return the number of overhangs."""
-    return {"T": 2, "L": 1, "rectangular": 0}[outline.shape]
+    return OVERHANGS[outline.shape]
 
 
 @lru_cache(maxsize=1024)
@@ -257,8 +258,7 @@ def ties_at(designed: Designed, runs: Iterable[BarRun], support: int) -> float:
 
     0 where none are. Hooks in the overhangs stand outside them.
     """
-    name = "hook_start" if support == 1 else "hook_end"
-    sizes = {run.size for run in runs if getattr(run, name) and not run.outside}
+    sizes = {run.size for run in runs if run.bent_at(support) and not run.outside}
     found = [hook_at(designed, support, size) for size in sizes]
     return min((hook.s_tie for hook in found if hook.tied), default=0.0)
 

@@ -21,6 +21,7 @@ from lineproof.beams.continuous.section_checks import (
     fails,
     top_checks,
 )
+from lineproof.beams.inputs import OVERHANGS
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import minimum
 from lineproof.standards.a23_3.bars import (
@@ -182,7 +183,7 @@ Part = Callable[[str, TopBars], float]
 
 def top_trial(rules: Rules, stirrup: str, part: Part) -> Trial:
     """Return the search for the least top bars of one size; each face must pass."""
-    sides = {"T": 2, "L": 1, "rectangular": 0}[rules.shape]
+    sides = OVERHANGS[rules.shape]
 
     def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, str]:
         why: Counter[str] = Counter()

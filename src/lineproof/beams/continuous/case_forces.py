@@ -21,7 +21,7 @@ from lineproof.record import Entry
 NEAR = 1e-6
 """Distance within which a station and a load are at the same place [mm]."""
 _ROUNDED, _LEAST = 1e-4, 1e6
-"""Part by which lines may differ from the analysis, and the least moment or shear it is of."""
+"""Part by which lines may differ from the analysis, and the least M or V it is of [N.mm, N]."""
 
 
 @dataclass(frozen=True, slots=True)

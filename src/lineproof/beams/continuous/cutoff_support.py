@@ -230,14 +230,15 @@ def record_hooks(writers: Writers, runs: Runs) -> Hooks:
     made: dict[HookKey, Entry] = {}
     designed, sheet = writers.designed, writers.sheet
     last = len(designed.outline.supports)
-    for support, name in ((1, "hook_start"), (last, "hook_end")):
+    for support in (1, last):
         ties = ties_at(designed, runs, support)
-        bent = [run for run in runs if getattr(run, name)]
+        bent = [run for run in runs if run.bent_at(support)]
+        named = f"support {support}" if designed.held(support) else "the free end"
         for kind in sorted({hook_key(support, run) for run in bent}):
             _, size, outside = kind
             key = f"anchorage-end-{support}-hook-{size.lower()}{OUTSIDE if outside else ''}"
             where = " in the overhangs" if outside else ""
-            with sheet.part(key, f"Hooks of bars {size}{where} at support {support}"):
+            with sheet.part(key, f"Hooks of bars {size}{where} at {named}"):
                 place = record_hook(writers, {}, support, size, ties, outside=outside)
                 made[kind] = place["l_dh"]
                 if designed.held(support):

@@ -25,7 +25,7 @@ from lineproof.beams.continuous.design_torsion import (
     more,
     torsion_forces,
 )
-from lineproof.beams.continuous.detailing import beside_ties, hook_ties, lay_bars
+from lineproof.beams.continuous.detailing import lay_bars
 from lineproof.beams.continuous.detailing_data import (
     Basis,
     Designed,
@@ -43,9 +43,9 @@ from lineproof.beams.continuous.detailing_given import (
     tail_cover,
     top_bars_at,
 )
+from lineproof.beams.continuous.detailing_ties import beside_ties, hook_ties
 from lineproof.beams.continuous.developed import Developed, developed_at
 from lineproof.beams.continuous.faces import Face
-from lineproof.beams.continuous.flexure_choice import SIDES
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import Standing, stand
@@ -58,6 +58,7 @@ from lineproof.beams.continuous.shear_stretches import (
 )
 from lineproof.beams.continuous.skin import SideBars, side_bars, skin_runs
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.beams.inputs import OVERHANGS
 from lineproof.errors import UserError
 from lineproof.standards.codes import CodePair
 
@@ -332,7 +333,7 @@ def _given_sections(
 
 def _as_chosen(top: SupportTop, model: Model) -> TopBars | None:
     """Return top bars that stand at a place as those of a section; None without any in the web."""
-    sides = SIDES[model.inputs.shape]
+    sides = OVERHANGS[model.inputs.shape]
     if not top.web:
         return None
     beside = top.overhang // sides if sides else 0

@@ -18,7 +18,7 @@ from lineproof.beams.continuous.anchorage import hook_part
 from lineproof.beams.continuous.detailing_bottom import SIDES, face_demand, face_tension
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
 from lineproof.beams.continuous.detailing_tips import tip_lacks
-from lineproof.beams.continuous.layout import BarRun, Face
+from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.resistance import Standing, yield_force
 from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.errors import UserError
@@ -219,13 +219,9 @@ def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tupl
         there = [bars for bars in standing if bars.run.face == "bottom"]
         area = _anchored_area(designed, there, "bottom", support)
         needed = face_tension(designed, span, near) / yield_force(designed)
-        hooked = {bars.run.size for bars in there if _hooked(bars.run, support)}
+        hooked = {bars.run.size for bars in there if bars.run.bent_at(support)}
         if area < needed or not all(hook_part(designed, support, size) for size in hooked):
             yield span, needed
-
-
-def _hooked(run: BarRun, support: int) -> str:
-    return run.hook_start if support == 1 else run.hook_end
 
 
 def _with(made: Asked, before: Asked, lack: Lack, bars: SectionBars, free: Open) -> Asked:

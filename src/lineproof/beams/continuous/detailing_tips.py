@@ -25,10 +25,11 @@ def with_tip_hooks(frame: Frame, runs: Sequence[BarRun]) -> tuple[BarRun, ...]:
     for support in _tips(designed):
         if not has_hooks(designed):
             continue
-        hooked = tuple(_hooked(designed, support, run) for run in made)
         straight = _worst(frame, support, stand(designed, made))
-        if straight > MARGIN and _worst(frame, support, stand(designed, hooked)) < straight:
-            made = hooked
+        if straight > MARGIN:
+            hooked = tuple(_hooked(designed, support, run) for run in made)
+            better = _worst(frame, support, stand(designed, hooked)) < straight
+            made = hooked if better else made
     return made
 
 
@@ -52,10 +53,11 @@ def _tips(designed: Designed) -> list[int]:
 
 def _hooked(designed: Designed, support: int, run: BarRun) -> BarRun:
     """Return a bar that ends at the tip with a hook there, if it is within the web and has room."""
-    at_tip, end = designed.outline.ends[0 if support == 1 else 1], designed.end_cover
-    x = run.start - end if support == 1 else run.end + end
+    tip, inward = designed.outline.end_at(support)
+    x = run.start if support == 1 else run.end
+    ends_there = abs(x - tip - inward * designed.end_cover) <= _NEAR
     within = run.face == "top" and run.place == "web"
-    if not within or abs(x - at_tip) > _NEAR or not hook_leg_fits(designed, support, run.size):
+    if not (within and ends_there and hook_leg_fits(designed, support, run.size)):
         return run
     return replace(run, hook_start="90") if support == 1 else replace(run, hook_end="90")
 
@@ -63,8 +65,8 @@ def _hooked(designed: Designed, support: int, run: BarRun) -> BarRun:
 def _worst(frame: Frame, support: int, standing: Sequence[Standing]) -> float:
     """Return the worst ratio of the top bars within their development length from the tip."""
     outline = frame.designed.outline
-    tip = outline.ends[0 if support == 1 else 1]
+    tip, inward = outline.end_at(support)
     reach = max((max(bars.rise_start, bars.rise_end) for bars in standing), default=0.0)
     span = 1 if support == 1 else len(outline.lengths)
-    bounds = (tip, tip + reach) if support == 1 else (tip - reach, tip)
-    return worst_between(frame, standing, "top", span, bounds)
+    low, high = sorted((tip, tip + inward * reach))
+    return worst_between(frame, standing, "top", span, (low, high))

@@ -31,6 +31,7 @@ from lineproof.beams.continuous.section_checks import (
 )
 from lineproof.beams.cracks import exposure_kind
 from lineproof.beams.flexure import confirmed_value
+from lineproof.beams.inputs import OVERHANGS
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import bars, crack_control, flexure, minimum
 from lineproof.standards.codes import CodePair
@@ -39,8 +40,6 @@ _MATERIALS = (
     "phi_c", "phi_s", "f_c", "f_y", "E_s", "eps_cu", "lambda_", "alpha_1", "beta_1", "f_r", "E_c",
     "c_c", "a_max", "b_w",
 )  # fmt: skip
-SIDES = {"T": 2, "L": 1, "rectangular": 0}
-"""Number of overhangs of a shape."""
 
 
 def materials_of(model: Model, pair: CodePair) -> Numbers:
@@ -166,7 +165,7 @@ def given_top_bars(model: Model, pair: CodePair) -> dict[int, TopBars]:
 
 def _with_overhang(model: Model, web: BarLayer, numbers: Iterable[Numbers]) -> TopBars:
     """Return top bars with the bars of the same size that the overhangs need."""
-    sides = SIDES[model.inputs.shape]
+    sides = OVERHANGS[model.inputs.shape]
     if not sides:
         return TopBars(web, 0, 0)
     needed = max(

@@ -73,6 +73,10 @@ class BeamOutline:
         """Outer ends of the concrete: the outer faces of the end supports."""
         return -self.supports[0].half, self.axes[-1] + self.supports[-1].half
 
+    def end_at(self, support: int) -> tuple[float, int]:
+        """Return the outer end of the concrete at an end support, and 1 or -1: inward from it."""
+        return (self.ends[0], 1) if support == 1 else (self.ends[1], -1)
+
 
 @dataclass(frozen=True, slots=True)
 class BarRun:
@@ -95,6 +99,10 @@ class BarRun:
     hook_end: Hook = ""
     serves: str = ""
     mark: str = ""
+
+    def bent_at(self, support: int) -> Hook:
+        """Return the hook at an end of the beam, by the number of its support: 1 or the last."""
+        return self.hook_start if support == 1 else self.hook_end
 
     @property
     def outside(self) -> bool:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from itertools import pairwise
 
+from lineproof.beams.continuous.anchorage import sides_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.model import Model
@@ -28,7 +29,7 @@ def span_torsion(
     if not inputs.torques and not imported:
         return None
     outline = designed.outline
-    sides = {"T": 2, "L": 1, "rectangular": 0}[outline.shape]
+    sides = sides_of(outline)
     overhang = (outline.widths[span - 1] - outline.b_w) / sides if sides else 0.0
     return SpanTorsion.of(
         {kind: typed.value / PER_METRE for kind, typed in inputs.torques.items()},
