@@ -148,20 +148,20 @@ def _reaches(frame: Frame, support: int) -> dict[End, Reach]:
         if groups and designed.forces.has_span(support, side):
             span = support - 1 if side == "left" else support
             reaches[side] = _reach(frame, span, other(side), groups, long_of(groups))
-    if len(reaches) == len(SIDES):
-        reaches = {side: _developed(designed, support, side, groups, found)
-                   for side, found in reaches.items()}  # fmt: skip
+    reaches = {
+        side: _developed(designed, support, side, groups, found) for side, found in reaches.items()
+    }
     return _alike(designed, support, reaches)
 
 
 def _developed(
     designed: Designed, support: int, side: End, groups: Sequence[BarRun], found: Reach
 ) -> Reach:
-    """Return a reach that develops the bars at the support axis, for the face beyond it."""
+    """Return a reach that develops the bars at both faces of their support (12.1.1)."""
     span = support - 1 if side == "left" else support
     most = designed.outline.lengths[span - 1] - designed.end_cover
     longest = max(development_length(designed, run) for run in groups)
-    least = min(ceil50(longest), most)
+    least = min(ceil50(half_of(designed, span, other(side)) + longest), most)
     return Reach(max(found.long, least), max(found.short, least), found.through)
 
 
