@@ -14,8 +14,9 @@ from typing import Any
 
 SEAL = "seal"
 LENGTH = 32
-_WHOLE = re.compile(r"(?<=[:,\[])(-?\d+)\.0(?=[,\]}])")
-_MINUS_ZERO = re.compile(r"(?<=[:,\[])-0(?=[,\]}])")
+# Each begins with what is rare in the text: half of the sealing would else be this search.
+_WHOLE = re.compile(r"([:,\[]-?[0-9]+)\.0(?=[,\]}])")
+_MINUS_ZERO = re.compile(r"-0(?<=[:,\[]-0)(?=[,\]}])")
 
 
 def seal_of(data: Mapping[str, Any]) -> str:
