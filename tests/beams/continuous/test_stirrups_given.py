@@ -214,16 +214,17 @@ def test_after_a_gap_the_stirrups_move_outward() -> None:
 
 
 def test_the_closest_neighbours_are_checked() -> None:
-    """Stirrups at 0, 300, 600 and 700 mm: 100 mm. A tie 60 mm before the first one is closer.
+    """Stirrups at 0, 300, 600 and 700 mm: 100 mm. A tie 40 mm before the first one is closer.
 
     Ties among themselves, 55 mm apart, are not stirrups: their clear distance is that of bars.
+    One that stands 60 mm before the first stirrup leaves more room than they do.
     """
     one = StirrupZone(1, 0.0, 600.0, 3, 300.0, "10M")
     last = replace(one, start=700.0, end=700.0, number=1)
-    far, near = (
-        replace(one, start=x - 110.0, end=x, number=3, spacing=55.0) for x in (-150.0, -60.0)
+    wide, near = (
+        replace(one, start=x - 110.0, end=x, number=3, spacing=55.0) for x in (-60.0, -40.0)
     )
     assert closest((one, last), ()) == (100.0, 650.0)
-    assert closest((one, last), (far,)) == (100.0, 650.0)
-    assert closest((one, last), (near,)) == (60.0, -30.0)
+    assert closest((one, last), (wide,)) == (100.0, 650.0)
+    assert closest((one, last), (near,)) == (40.0, -20.0)
     assert closest((last,), ()) == (300.0, 700.0)

@@ -21,8 +21,9 @@ _FIRST = (
 )
 _TIES = (
     "The ties around the hooks where the beam ends are no stirrups for shear; 12.5.4 asks them to "
-    "stand closer. At a free end they take the place of the stirrups there. Between them the least "
-    "clear distance is that of bars; it is checked with the hooks."
+    "stand closer. At a free end they take the place of the stirrups there. Their least clear "
+    "distance is that of bars and is checked with the hooks; a stirrup may stand as near to them "
+    "as they stand to each other."
 )
 _GIVEN = "The stirrups are as given and checked as they stand."
 _STATIONS = (
@@ -91,12 +92,16 @@ def record_stirrups(
 def closest(zones: Sequence[StirrupZone], ties: Sequence[StirrupZone]) -> tuple[float, float]:
     """Return the least distance of a stirrup from its neighbour, and where it is [mm].
 
-    The neighbour is a stirrup or a tie. One stirrup alone has the spacing of its zone.
+    The neighbour is a stirrup, or a tie that stands closer than ties stand to each other: no more
+    room is needed than between these. One stirrup alone has the spacing of its zone.
     """
-    places = [(x, True) for zone in zones for x in places_of(zone)]
-    places += [(x, False) for zone in ties for x in places_of(zone)]
-    pairs = pairwise(sorted(places))
-    apart = [(other - x, (x + other) / 2) for (x, a), (other, b) in pairs if a or b]
+    places = [(x, 0.0) for zone in zones for x in places_of(zone)]
+    places += [(x, zone.spacing) for zone in ties for x in places_of(zone)]
+    apart = [
+        (other - x, (x + other) / 2)
+        for (x, tied), (other, beyond) in pairwise(sorted(places))
+        if not (tied and beyond) and (not (tied or beyond) or other - x < max(tied, beyond))
+    ]
     return min(apart, default=(zones[0].spacing, zones[0].start))
 
 
