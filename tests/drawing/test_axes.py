@@ -4,10 +4,14 @@ from __future__ import annotations
 
 from itertools import pairwise
 
+import numpy as np
 import pytest
+from hypothesis import given
+from hypothesis import strategies as st
 
 from lineproof.drawing import Circle, Line
 from lineproof.drawing.axes import (
+    UNSEEN,
     Axes,
     curve,
     drop_lines,
@@ -15,6 +19,7 @@ from lineproof.drawing.axes import (
     level,
     nice_ticks,
     spread,
+    thinned,
     tick_texts,
 )
 from lineproof.drawing.shapes import Text, words
@@ -60,6 +65,29 @@ def test_values_stand_at_their_places() -> None:
     assert isinstance(dot, Circle)
     assert dot.centre == (45.0, 50.0)
     assert [drop.end for drop in drops if isinstance(drop, Line)] == [(45.0, 10.0), (20.0, 50.0)]
+
+
+HEIGHTS = st.one_of(st.floats(-50, 50), st.floats(-UNSEEN, UNSEEN))
+
+
+@given(heights=st.lists(HEIGHTS, min_size=1, max_size=40))
+def test_a_curve_loses_only_points_that_cannot_be_seen(heights: list[float]) -> None:
+    """All points left out lie on the line through the others, by numpy.interp."""
+    points = [(0.5 * place, y) for place, y in enumerate(heights)]
+    kept = thinned(points)
+
+    assert set(kept) <= set(points)
+    assert (kept[0], kept[-1]) == (points[0], points[-1])
+    again = np.interp([x for x, _ in points], *np.array(kept).T)
+    assert np.abs(again - heights).max() <= UNSEEN * (1 + 1e-9)
+
+
+def test_steps_and_corners_of_a_curve_stay() -> None:
+    """Bars that start to count: level, a step at one place, level again, a corner."""
+    corners = [(0.0, 1.0), (4.0, 1.0), (4.0, 2.0), (8.0, 2.0), (9.0, 5.0)]
+    between = [(1.0, 1.0), (3.0, 1.0), (5.0, 2.0), (7.0, 2.0), (8.5, 3.5)]
+    # Sorting by the place alone keeps both ends of the step in their order.
+    assert thinned(sorted([*corners, *between], key=lambda point: point[0])) == corners
 
 
 def test_frame_prints_every_tick() -> None:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 
 from lineproof.drawing.shapes import (
     LIGHT,
@@ -27,6 +28,9 @@ CURVE_WEIGHT = 0.45
 LEVEL_WEIGHT = 0.3
 MOST_DECIMALS = 9
 GROUPED_FROM = 10_000
+UNSEEN = 0.005
+"""Distance on paper [mm] that no printer shows: a hundredth of the width of a curve."""
+_CURVE_DECIMALS = 4
 
 
 @dataclass(frozen=True, slots=True)
@@ -104,8 +108,38 @@ def frame(
 
 
 def curve(axes: Axes, points: Iterable[Point], dash: Dash = "solid") -> Polyline:
-    """Draw a curve through value pairs; several curves are told apart by their dashes."""
-    return Polyline(tuple(axes.at(x, y) for x, y in points), "curve", CURVE_WEIGHT, dash)
+    """Draw a curve through value pairs; several curves are told apart by their dashes.
+
+    Points without which it would look the same are left out.
+    """
+    on_paper = [axes.at(x, y) for x, y in points]
+    seen = thinned([(round(x, _CURVE_DECIMALS), round(y, _CURVE_DECIMALS)) for x, y in on_paper])
+    return Polyline(tuple(seen), "curve", CURVE_WEIGHT, dash)
+
+
+def thinned(points: Sequence[Point], within: float = UNSEEN) -> list[Point]:
+    """Return a line without the points that lie ``within`` a height [mm] of the line without them.
+
+    From each point that stays, the line goes on as far as one straight piece passes all points
+    between. Steps and pieces that run back stay as they are.
+
+    >>> thinned([(0.0, 0.0), (1.0, 0.001), (2.0, 0.0), (2.0, 1.0), (3.0, 3.0)])
+    [(0.0, 0.0), (2.0, 0.0), (2.0, 1.0), (3.0, 3.0)]
+    """
+    kept = list(points[:1])
+    low, high = -math.inf, math.inf  # slopes from the last kept point that pass all since
+    for before, point in pairwise(points):
+        start = kept[-1]
+        run, rise = point[0] - start[0], point[1] - start[1]
+        if before != start and not (run > 0 and low <= rise / run <= high):
+            kept.append(before)
+            low, high = -math.inf, math.inf
+            run, rise = point[0] - before[0], point[1] - before[1]
+        if run > 0:
+            low, high = max(low, (rise - within) / run), min(high, (rise + within) / run)
+        else:
+            low, high = math.inf, -math.inf
+    return [*kept, *points[-1:]] if len(points) > 1 else kept
 
 
 def level(axes: Axes, y: float, dash: Dash) -> Line:
