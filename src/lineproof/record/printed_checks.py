@@ -26,7 +26,7 @@ from lineproof.record.entry import (
 from lineproof.record.utilisation import ratio_of_texts
 
 _MOST_KEPT = 8192
-"""Printed numbers that are kept as read: the same ones stand in many lines."""
+"""Printed numbers that are kept as read and as compared: the same ones stand in many lines."""
 _LEAST_DIGITS = 3
 _NAMED = (LINE, FOUND, *CRITERIA)
 """Kinds whose digest names what they rest on; figures and tables only show it."""
@@ -39,6 +39,7 @@ Finding = tuple[str, str, str]
 """What differs, as stored, as it should be."""
 
 
+@lru_cache(maxsize=_MOST_KEPT)
 def rounds_to(text: str, value: float) -> bool:
     """Tell whether a printed number is ``value`` rounded to the digits that it shows.
 
