@@ -118,6 +118,11 @@ class ContinuousInputs:
         return self.h_f is not None
 
     @property
+    def held(self) -> tuple[int, ...]:
+        """Numbers of the supports; free ends are none."""
+        return tuple(j for j, each in enumerate(self.supports, start=1) if each.kind != "free")
+
+    @property
     def bars_given(self) -> bool:
         """Whether any bars are given, by section or along the beam."""
         return self.bar_runs is not None or any((*self.bottom_bars, *self.top_bars))

@@ -40,7 +40,7 @@ def record_reactions(model: Model, scopes: Scopes) -> None:
     For live load the largest reaction has it on those spans only that raise it, the smallest on
     those that lower it. The least factored reaction of a support is that of all load types.
     """
-    supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
+    supports = model.inputs.held
     for group, scope in scopes.items():
         made = {j: _reaction(model, group, scope, j) for j in supports}
         _check_equilibrium(model, group, scope, [e for e in made.values() if e is not None])

@@ -24,7 +24,7 @@ WIDTHS = (20.0, 140.0)
 def support_rows(design: Design) -> Iterator[Row]:
     """Give a row for the hanger stirrups of each girder, and for hooks that are not tied here."""
     for number in range(1, len(design.outline.supports) + 1):
-        if design.outline.supports[number - 1].kind != "free":
+        if design.designed.held(number):
             yield from _hangers(design, number)
         yield from _hooks(design, number)
 
@@ -36,7 +36,7 @@ def turning_table(model: Model) -> tuple[list[str], list[Row]]:
     """
     parts = (part for part in model.sheet.parts if part.key in (ANALYSIS, TORQUES))
     entries = {name: entry for part in parts for name, entry in part.entries.items()}
-    supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
+    supports = model.inputs.held
     kinds = [(f"{{}}{code(kind)}", KINDS[kind], kind in LIVE) for kind in KINDS]
     asked = [("M_c" + mark, f"{'largest ' * live}M, {words}, kN.m") for mark, words, live in kinds]
     asked += [("M_cm" + mark, f"least M, {words}, kN.m") for mark, words, live in kinds if live]

@@ -235,10 +235,10 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
         return columns, [Row(tuple(row), None) for row in found]
     entries = model.sheet.entries_of(ANALYSIS)
     kinds = [
-        kind for kind in KINDS if any(f"R_{j}{code(kind)}" in entries for j in _supports(model))
+        kind for kind in KINDS if any(f"R_{j}{code(kind)}" in entries for j in model.inputs.held)
     ]
     lowered = [
-        kind for kind in kinds if any(f"R_m{j}{code(kind)}" in entries for j in _supports(model))
+        kind for kind in kinds if any(f"R_m{j}{code(kind)}" in entries for j in model.inputs.held)
     ]
     columns = [
         "Support", "On",
@@ -246,7 +246,7 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
         *(f"least R, {KINDS[kind]}, kN" for kind in lowered),
     ]  # fmt: skip
     rows = []
-    for j in _supports(model):
+    for j in model.inputs.held:
         cells, last = [], None
         names = [f"R_{j}{code(kind)}" for kind in kinds]
         names += [f"R_m{j}{code(kind)}" for kind in lowered]
@@ -256,7 +256,3 @@ def reaction_table(model: Model) -> tuple[list[str], list[Row]]:
             last = entry if entry is not None else last
         rows.append(Row((str(j), model.inputs.supports[j - 1].carrier, *cells), last))
     return columns, rows
-
-
-def _supports(model: Model) -> list[int]:
-    return [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]

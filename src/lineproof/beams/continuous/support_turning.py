@@ -95,7 +95,7 @@ def record_support_torques(model: Model, torques: Mapping[str, Entry]) -> None:
     kinds = [kind for kind in KINDS if torque_symbol(kind) in torques]
     if not kinds:
         return
-    supports = [j for j, s in enumerate(model.inputs.supports, start=1) if s.kind != "free"]
+    supports = model.inputs.held
     sheet = model.sheet
     sheet.notation = sheet.notation | notation(_symbols_of_torques(supports, kinds))
     with sheet.part(TORQUES, "Torques of the supports"):
