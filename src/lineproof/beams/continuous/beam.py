@@ -168,9 +168,8 @@ class ContinuousBeam:
             record_cover(self.sheet, self.inputs, sizes or [run.size for run in design.runs])
             for span in faces.sagging_spans(design.model):
                 flexure.record_sag(design, span)
-            for support, typed in enumerate(self.inputs.supports, start=1):
-                if typed.kind != "free":
-                    flexure.record_hog(design, support)
+            for support in self.inputs.held:
+                flexure.record_hog(design, support)
 
     def shear(self) -> None:
         """Record stirrups, shear and torsion, supports, and the plane of flange and web."""

@@ -28,7 +28,6 @@ from lineproof.beams.continuous.cutoff_sets import (
     text_of,
 )
 from lineproof.beams.continuous.detailing_bottom import support_shear
-from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.resistance_demand import end_tensions, end_torsion, stretch_at
 from lineproof.beams.steps import Steps
@@ -82,7 +81,8 @@ def record_into_support(site: Site) -> None:
     with sheet.part(site.key, f"{site.title} into support {support}"):
         sheet.note("bars-text", f"Into the support: {text_of(side.kept) or 'none'}.", title="Bars")
         if not side.kept:
-            _fail(site, clause.INTO_CONTINUOUS_SUPPORT, "A_se", "0 mm2")
+            none = sheet.given("A_se", "0 mm2", source="as laid")
+            sheet.check(clause.INTO_CONTINUOUS_SUPPORT, A_se=none, A_s=site.section["A_s"])
             return
         steps = begin(site.writers, sheet, side.span, "bottom")
         A_se = record_area(steps, grouped(site.writers, side.kept), "A_se", depth=False)
@@ -114,12 +114,6 @@ def _beyond(writers: Writers, support: int, runs: Iterable[BarRun]) -> float:
     """Return the most concrete between bars that end in an end support and the end of the beam."""
     low, high = writers.designed.outline.ends
     return max(run.start - low if support == 1 else high - run.end for run in runs)
-
-
-def _fail(site: Site, test: object, symbol: str, nothing: str) -> None:
-    """Record a check that fails for want of bars."""
-    none = site.writers.sheet.given(symbol, nothing, source="as laid")
-    site.writers.sheet.check(test, **{symbol: none, "A_s": site.section["A_s"]})  # type: ignore[arg-type]
 
 
 def record_zero_moment(site: Site, hooked: Hooks) -> None:
@@ -170,8 +164,8 @@ def _record_simple(site: Site, support: int, hooked: Hooks) -> None:
         steps.line(clause.PAST_CENTRE)
         _, confined = support_shear(designed, side.span, side.near)
         steps.line(clause.LIMIT_CONFINED if confined else clause.LIMIT)
-        lengths = [hooked[hook_key(support, r)] for r in side.kept if _hook(r, side.near)]
-        straight = tuple(r for r in side.kept if not _hook(r, side.near))
+        lengths = [hooked[hook_key(support, r)] for r in side.kept if r.bent_at(support)]
+        straight = tuple(r for r in side.kept if not r.bent_at(support))
         lengths += [site.longest(straight)["l_d"]] if straight else []
         longest = max(lengths, key=lambda e: e.value)
         steps.check(clause.DEVELOPED_AT_ZERO_MOMENT, l_d=longest)
@@ -183,10 +177,6 @@ def _kept(site: Site) -> Steps:
     record_area(steps, grouped(site.writers, site.side.kept), "A_s")
     record_resistance(steps, site.writers, site.side.face)
     return steps
-
-
-def _hook(run: BarRun, near: End) -> str:
-    return run.hook_start if near == "left" else run.hook_end
 
 
 def assumed_restraint(site: Site) -> bool:
@@ -276,9 +266,8 @@ def record_end_bottom(site: Site, hooked: Hooks) -> None:
         rows = []
         half = half_of(designed, side.span, side.near)
         for run in side.kept:
-            needed = (
-                hooked[hook_key(support, run)] if _hook(run, side.near) else site.bar(run)["l_d"]
-            )
+            bent = run.bent_at(support)
+            needed = hooked[hook_key(support, run)] if bent else site.bar(run)["l_d"]
             (group,) = grouped(writers, (run,))
             l_av = half - distance(designed, side.span, side.near, tip(run, side.near))
             rows.append((group, l_av, needed))
@@ -321,7 +310,7 @@ def record_end_top(site: Site) -> None:
     side, writers = site.side, site.writers
     sheet = writers.sheet
     support = support_of(side.span, side.near)
-    straight = [run for run in side.runs if not _hook(run, side.near)]
+    straight = [run for run in side.runs if not run.bent_at(support)]
     for number, size in enumerate(sorted({run.size for run in straight}), 1):
         same = [run for run in straight if run.size == size]
         with sheet.part(
