@@ -365,9 +365,8 @@ def test_inputs_that_would_change_nothing_are_refused() -> None:
 
 
 def test_a_torque_per_metre_may_be_typed_as_the_message_and_the_page_write_it() -> None:
-    """5.5 kN.m on every metre: '5.5 kN.m', and '5.5 kN.m/m' as the page prints it."""
-    texts = "5.5 kN.m", "5.5 kN.m/m"
-    short, whole = (read_torques("torques", {"D": text})["D"] for text in texts)
-    assert short.value == whole.value == 5.5e6
+    """5.5 kN.m on every metre: '5.5 kN.m', and '5.5 kN·m/m' as the page prints it."""
+    texts = "5.5 kN.m", "5.5 kN.m/m", "5.5 kN·m/m"
+    assert [read_torques("torques", {"D": text})["D"].value for text in texts] == [5.5e6] * 3
     with pytest.raises(UserError, match=r"'5\.5 kN' is a force"):
         read_torques("torques", {"D": "5.5 kN"})

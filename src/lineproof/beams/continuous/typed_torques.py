@@ -8,6 +8,7 @@ from lineproof.beams.continuous.typed_beam import GRAVITY_TYPES
 from lineproof.beams.inputs import Range, read_in_range
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import QuantityInput, Typed, echo
+from lineproof.quantity.units import plain_spelling
 
 TORQUE = Range("kN.m", 0, 1000, zero=True)
 KINDS_OF_TORSION = ("compatibility", "equilibrium")
@@ -33,8 +34,7 @@ def read_torques(name: str, given: object) -> dict[str, Typed]:
     return made
 
 
-def _on_one_metre(text: QuantityInput) -> QuantityInput:
-    """Return a torque per metre as the torque on one metre: '5.5 kN.m/m' is '5.5 kN.m' there."""
-    if isinstance(text, str) and text.rstrip().endswith("N.m/m"):
-        return text.rstrip().removesuffix("/m")
-    return text
+def _on_one_metre(given: QuantityInput) -> QuantityInput:
+    """Return a torque per metre as the torque on one metre: '5.5 kN·m/m' is '5.5 kN.m' there."""
+    text = plain_spelling(given) if isinstance(given, str) else ""
+    return text.removesuffix("/m") if text.endswith("N.m/m") else given
