@@ -17,6 +17,7 @@ from lineproof.beams.analysis.model import (
     Support,
     UniformLoad,
 )
+from lineproof.beams.continuous.symbols import letter
 from lineproof.drawing import (
     LIGHT,
     MEDIUM,
@@ -143,7 +144,7 @@ class _Pen:
 
 
 def _title(kind: str, name: str) -> Runs:
-    title: Runs = ((kind.partition("_")[0], "bold"),)
+    title: Runs = ((letter(kind), "bold"),)
     return (*title, (f"  {name}", "roman")) if name else title
 
 

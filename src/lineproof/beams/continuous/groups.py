@@ -10,9 +10,8 @@ from typing import Any
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.forces import End
-from lineproof.beams.continuous.loads import kind_text
 from lineproof.beams.continuous.model import Model, SingleLoad, near_support
-from lineproof.beams.continuous.symbols import KINDS, code
+from lineproof.beams.continuous.symbols import KINDS, code, subscript
 from lineproof.record import Entry
 
 
@@ -29,9 +28,9 @@ class Group:
         return f"{code(self.kind)}{self.span or ''}"
 
     @property
-    def text(self) -> str:
+    def subscript(self) -> str:
         """Return the group as a subscript."""
-        return f"{kind_text(self.kind)}{self.span or ''}"
+        return f"{subscript(self.kind)}{self.span or ''}"
 
     def holds(self, kind: str, span: int) -> bool:
         """Tell whether loads of a type on a span belong to it."""

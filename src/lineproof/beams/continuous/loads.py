@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from lineproof.beams.basics import record_tributary
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import COLUMNS, GIVEN, LOADS, single_loads, whole_span_loads
-from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, stated
+from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, stated, subscript
 from lineproof.beams.continuous.typed_beam import TypedColumn, TypedLoad
 from lineproof.formula import Symbol
 from lineproof.record import Entry
@@ -36,7 +36,7 @@ def beam_symbols(inputs: ContinuousInputs) -> Iterator[Symbol]:
         yield numbered(f"h_{k}", "h", str(k), f"overall depth of span {k}")
         for kind, words in KINDS.items():
             yield numbered(
-                f"w_{code(kind)}{k}", "w", f"{kind_text(kind)}{k}", f"{words} on span {k}"
+                f"w_{code(kind)}{k}", "w", f"{subscript(kind)}{k}", f"{words} on span {k}"
             )
     for j in range(1, count + 2):
         yield numbered(f"b_s{j}", "b", f"s{j}", f"width of support {j} along the beam")
@@ -45,11 +45,6 @@ def beam_symbols(inputs: ContinuousInputs) -> Iterator[Symbol]:
     for j, support in enumerate(inputs.supports, start=1):
         yield from _column_symbols(j, len(support.columns))
     yield from _load_symbols(inputs)
-
-
-def kind_text(kind: str) -> str:
-    """Return a load type as a subscript."""
-    return "L,st" if kind == "L_st" else kind
 
 
 def _column_symbols(support: int, columns: int) -> Iterator[Symbol]:

@@ -26,7 +26,7 @@ from lineproof.beams.continuous.imported_forces import (
 )
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport
-from lineproof.beams.continuous.symbols import code
+from lineproof.beams.continuous.symbols import KINDS, code
 from lineproof.beams.continuous.typed_beam import TypedLoad
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -127,7 +127,7 @@ def model_of(sheet: Sheet, inputs: ContinuousInputs) -> Model:
     lengths = tuple(given[f"l_{k}"] for k in range(1, count + 1))
     uniform = {
         (kind, k): loads[f"w_{code(kind)}{k}"]
-        for kind in ("D", "L", "L_st", "S")
+        for kind in KINDS
         for k in range(1, count + 1)
         if f"w_{code(kind)}{k}" in loads
     }

@@ -16,9 +16,8 @@ from lineproof.beams.continuous.groups import (
     uniform_name,
     where,
 )
-from lineproof.beams.continuous.loads import kind_text
 from lineproof.beams.continuous.model import ANALYSIS, Model, SingleLoad
-from lineproof.beams.continuous.symbols import KINDS, code, required, stated
+from lineproof.beams.continuous.symbols import KINDS, code, required, stated, subscript
 from lineproof.formula.grammar import LONGEST
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -172,7 +171,7 @@ def _least(model: Model, kinds: Sequence[str], support: int) -> None:
 
     least = min(factored_combinations(kinds), key=sum_of)
     terms = [(kind, factor_text(f)) for kind, f in least.factors if kind in values]
-    what = " + ".join(f"{factor}{kind_text(kind)}" for kind, factor in terms)
+    what = " + ".join(f"{factor}{subscript(kind)}" for kind, factor in terms)
     text = " + ".join(f"{factor}*{names[kind]}" for kind, factor in terms)
     made = sheet.line(
         stated(

@@ -10,12 +10,11 @@ from collections.abc import Iterator
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.groups import groups_of, moment_name
-from lineproof.beams.continuous.loads import kind_text
 from lineproof.beams.continuous.model import ANALYSIS, Model, near_support
 from lineproof.beams.continuous.reactions import record_reactions
 from lineproof.beams.continuous.support_moments import SupportMoments
 from lineproof.beams.continuous.support_turning import record_support_moments, symbols_of_moments
-from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered
+from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, subscript
 from lineproof.formula import Symbol
 
 _SIGNS = (
@@ -78,18 +77,18 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                     yield numbered(
                         name,
                         "M",
-                        f"{support}{side},{group.text}",
+                        f"{support}{side},{group.subscript}",
                         f"moment at support {support}{of}, {words}",
                     )
             for letter, end in (("a", "left"), ("b", "right")):
                 yield numbered(
                     f"F_{span}{letter}{group.code}",
                     "F",
-                    f"{span}{letter},{group.text}",
+                    f"{span}{letter},{group.subscript}",
                     f"slope at the {end} end of span {span}, simply supported, times EI, {words}",
                 )
         for support in range(1, model.spans + 2):
-            sub = f"{support},{kind_text(group.kind)}"
+            sub = f"{support},{subscript(group.kind)}"
             yield numbered(
                 f"R_{support}{code(group.kind)}",
                 "R",
@@ -107,7 +106,7 @@ def _symbols(model: Model) -> Iterator[Symbol]:
                 yield numbered(
                     f"R_{support}{group.code}",
                     "R",
-                    f"{support},{group.text}",
+                    f"{support},{group.subscript}",
                     f"reaction of support {support}, {words}, unfactored",
                 )
     yield from symbols_of_moments(model, groups_of(model))

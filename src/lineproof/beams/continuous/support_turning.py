@@ -10,9 +10,8 @@ from collections.abc import Iterator, Mapping, Sequence
 
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.groups import Group, ends_at, moment_name, named, where
-from lineproof.beams.continuous.loads import kind_text
 from lineproof.beams.continuous.model import Model
-from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, stated
+from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, stated, subscript
 from lineproof.beams.continuous.torsion_record import torque_symbol
 from lineproof.formula import Symbol
 from lineproof.record import Entry
@@ -40,9 +39,9 @@ def symbols_of_moments(model: Model, groups: Sequence[Group]) -> Iterator[Symbol
     for j in holding(model):
         for group in groups:
             meaning = f"moment on support {j}, {where(group)}, unfactored"
-            yield numbered(f"M_c{j}{group.code}", "M", f"c{j},{group.text}", meaning)
+            yield numbered(f"M_c{j}{group.code}", "M", f"c{j},{group.subscript}", meaning)
         for kind in dict.fromkeys(group.kind for group in groups if group.kind in LIVE):
-            sub = f"{j},{kind_text(kind)}"
+            sub = f"{j},{subscript(kind)}"
             for mark, most in (("", "largest"), ("m", "smallest")):
                 meaning = f"{most} moment on support {j}, {KINDS[kind]}, unfactored"
                 yield numbered(f"M_c{mark}{j}{code(kind)}", "M", f"c{mark}{sub}", meaning)
@@ -112,7 +111,7 @@ def _symbols_of_torques(supports: Sequence[int], kinds: Sequence[str]) -> Iterat
     for j in supports:
         for kind in kinds:
             meaning = f"torque of support {j}, {KINDS[kind]}, unfactored"
-            yield numbered(f"T_c{j}{code(kind)}", "T", f"c{j},{kind_text(kind)}", meaning)
+            yield numbered(f"T_c{j}{code(kind)}", "T", f"c{j},{subscript(kind)}", meaning)
 
 
 def _length(model: Model, span: int) -> str:

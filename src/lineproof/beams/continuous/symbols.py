@@ -18,7 +18,6 @@ from lineproof.standards.references import MECHANICS
 
 KINDS = {"D": "dead load", "L": "live load", "L_st": "live load of storage", "S": "snow"}
 """Load types in words."""
-_CODES = {"L_st": "Lst"}
 _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
     (re.compile(pattern), unit)
     for pattern, unit in (
@@ -60,8 +59,18 @@ _PATTERNS: tuple[tuple[re.Pattern[str], str], ...] = tuple(
 
 
 def code(kind: str) -> str:
-    """Return a load type as it stands in an id."""
-    return _CODES.get(kind, kind)
+    """Return a load type as it stands in an id: ``L_st`` as ``Lst``."""
+    return kind.replace("_", "")
+
+
+def subscript(kind: str) -> str:
+    """Return a load type as a subscript: ``L_st`` as ``L,st``."""
+    return kind.replace("_", ",")
+
+
+def letter(kind: str) -> str:
+    """Return the letter of a load type, as combinations of loads name it: ``L_st`` as ``L``."""
+    return kind.partition("_")[0]
 
 
 @lru_cache(maxsize=4096)

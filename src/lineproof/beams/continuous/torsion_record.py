@@ -48,7 +48,7 @@ def record_span_torsion(
     for kind, torque in torsion.torques.items():
         name = torque_symbol(kind)
         made[name] = sheet.given(
-            name, f"{torque / 1000:.12g} kN.m/m", f"torque per length by {KINDS.get(kind, kind)}",
+            name, f"{torque / 1000:.12g} kN.m/m", f"torque per length by {KINDS[kind]}",
             source="torques of the inputs",
         )  # fmt: skip
     held = _HELD_ONCE if cantilever else _HELD
