@@ -66,11 +66,8 @@ class Worked:
 
         ``label`` is that of the part.
         """
-        fails = any(entry["kind"] == "check" and not entry["holds"] for entry in entries)
-        keys = [
-            self._note_key(entry, fails) if entry["kind"] == "note" else self._key(entry)
-            for entry in entries
-        ]
+        fails = any(_fails(entry) for entry in entries)
+        keys = ["" if fails and each["kind"] == "note" else self._key(each) for each in entries]
         told = [
             self._told(entry, row, key) for entry, row, key in zip(entries, rows, keys, strict=True)
         ]
@@ -80,9 +77,12 @@ class Worked:
         return tuple(_grouped(told))
 
     def _key(self, entry: Entry) -> str:
-        """Return all that a line shows of its working, "" where it must be worked in any case."""
-        failed = entry["kind"] == "check" and not entry["holds"]
-        if entry["kind"] not in _REPEATABLE or entry["id"] in self._marked or failed:
+        """Return all that a line or a note shows, "" for one that is printed in any case."""
+        if entry["id"] in self._marked:
+            return ""
+        if entry["kind"] == "note":
+            return _note_key(entry)
+        if entry["kind"] not in _REPEATABLE or _fails(entry):
             return ""
         closing = entry.get("closing") or {}
         return _SORTED.encode(
@@ -90,19 +90,24 @@ class Worked:
             | {"closing": {name: closing[name] for name in closing if name not in _OWN}}
         )
 
-    def _note_key(self, entry: Entry, fails: bool) -> str:  # noqa: FBT001 - told in one place
-        """Return what a long note says, "" for one that is short or stands beside a failure."""
-        if fails or entry["id"] in self._marked or len(entry["text"]) <= _LONG_NOTE:
-            return ""
-        return _SORTED.encode(
-            {name: entry[name] for name in entry if name not in ("id", "label", "digest")}
-        )
-
     def _told(self, entry: Entry, row: PrintedRow, key: str) -> PrintedRow | Repeated:
         seen = self._lines.get(key) if key else None
         if seen is None or not _same_numbers(entry, seen[0]):
             return row
         return Repeated(row, seen[0]["id"], seen[1])
+
+
+def _fails(entry: Entry) -> bool:
+    return entry["kind"] == "check" and not entry["holds"]
+
+
+def _note_key(note: Entry) -> str:
+    """Return what a long note says, "" for a short one."""
+    if len(note["text"]) <= _LONG_NOTE:
+        return ""
+    return _SORTED.encode(
+        {name: note[name] for name in note if name not in ("id", "label", "digest")}
+    )
 
 
 def _same_numbers(one: Entry, other: Entry) -> bool:
