@@ -16,9 +16,11 @@ from lineproof.beams.continuous.symbols import notation, numbered, stated
 from lineproof.beams.steps import Steps
 from lineproof.formula import Symbol
 from lineproof.record import Entry
+from lineproof.record.printing import in_unit
 from lineproof.standards.a23_3 import analysis
 
 _SCOPE = ("x_i", "x_j", "M_i", "M_j", "V_i", "V_j", "T_i", "T_j", "w_f", "x_f", "x_s")
+_DIGITS = 4
 
 
 def case_symbols() -> Iterator[Symbol]:
@@ -172,6 +174,11 @@ def typed(value: float, unit: str) -> str:
     """Return a number of the file [N and mm] as it is typed in a unit."""
     factor = {"m": 1e3, "kN": 1e3, "kN.m": 1e6}[unit]
     return f"{value / factor + 0.0:.12g} {unit}"
+
+
+def printed(value: float, unit: str) -> str:
+    """Return a number of the file to four digits; below 1 N or 1 N.mm it is round-off, and 0."""
+    return in_unit(value, unit, _DIGITS) if abs(value) >= 1.0 else "0"
 
 
 def line_of(file: ForcesFile, row: int, column: int) -> str:

@@ -8,23 +8,16 @@ from typing import Any
 
 import numpy as np
 
-from lineproof.beams.analysis.arrangements import Combination, factored_combinations
 from lineproof.beams.analysis.imported import SMALL_CASE, TOLERANCE, WIDEST_GAP
 from lineproof.beams.continuous.forces import Demand
-from lineproof.beams.continuous.imported_case import case_symbols, record_station, typed
+from lineproof.beams.continuous.imported_case import case_symbols, printed, record_station, typed
 from lineproof.beams.continuous.imported_forces import ForcesFile, ImportedForces, Piece
+from lineproof.beams.continuous.imported_take_down import record_take_down
 from lineproof.beams.continuous.inputs import ContinuousInputs
-from lineproof.beams.continuous.model import ANALYSIS, Model, SingleLoad
+from lineproof.beams.continuous.model import ANALYSIS, Model
 from lineproof.beams.continuous.reactions import note_uplift
-from lineproof.beams.continuous.symbols import (
-    notation,
-    numbered,
-    required,
-    stated,
-    stated_check,
-)
+from lineproof.beams.continuous.symbols import notation, numbered, required
 from lineproof.beams.steps import Steps
-from lineproof.record.printing import in_unit
 
 _SIGNS = (
     "x runs from the left axis of each span; loads act downward, reactions upward. M is positive "
@@ -45,22 +38,11 @@ _LARGEST = (
 )
 _COUPLES = "A change of M over a support is the couple that columns take there."
 _GROUP = 8
-_DIGITS = 4
 _CASE_COLUMNS = [
     "Combination", "Case", "M, largest, kN.m", "At", "M, smallest, kN.m", "At",
     "V, largest size, kN", "At",
 ]  # fmt: skip
 REACTIONS_TITLE = "Largest and smallest reactions of the imported cases, factored as in the file"
-_LOAD_COLUMNS = [
-    "Span", "File, kN", "Case", "Load take-down, kN", "Combination", "Ratio",
-]  # fmt: skip
-_TAKE_DOWN = (
-    "The load of a case on a span is the change of V from its left to its right end. A file of "
-    "this beam carries what its take-down asks for; a tenth is left for loads that the frame "
-    "analysis takes more closely. A ratio far above 1 asks for a reason as well."
-)
-LEAST_LOAD = 0.9
-"""Part of the load take-down that a file must carry on every span at least, in its largest case."""
 _REACTION_COLUMNS = ["Support", "R, largest, kN", "Case", "R, smallest, kN", "Case"]
 NOT_COVERED = (
     {"check": "Deflections: the imported moments are not known by load type", "clause": "9.8"},
@@ -116,7 +98,7 @@ def record_imported_analysis(model: Model) -> None:
             R = _reactions_of(forces, support)
             if min(R) < -TOLERANCE * max(abs(each) for each in R):
                 note_uplift(sheet, support)
-        _record_take_down(model, forces)
+        record_take_down(model, forces)
         sheet.note("reactions-source", _reactions_text(file), title="Reactions")
 
 
@@ -254,7 +236,7 @@ def _case_rows(forces: ImportedForces) -> Iterator[list[str]]:
         made = [case.combination, case.arrangement]
         for (value, unit), column in zip(values, places, strict=True):
             at = envelope.stations[column]
-            made += [_number(float(value), unit), f"span {at.span}, {at.x / 1000:.2f} m"]
+            made += [printed(float(value), unit), f"span {at.span}, {at.x / 1000:.2f} m"]
         yield made
 
 
@@ -272,8 +254,8 @@ def imported_reactions(model: Model) -> tuple[list[str], list[list[str]]]:
         high, low = int(np.argmax(R)), int(np.argmin(R))
         made.append([
             str(number),
-            _number(R[high], "kN"), str(forces.cases[high]),
-            _number(R[low], "kN"), str(forces.cases[low]),
+            printed(R[high], "kN"), str(forces.cases[high]),
+            printed(R[low], "kN"), str(forces.cases[low]),
         ])  # fmt: skip
     return list(_REACTION_COLUMNS), made
 
@@ -287,82 +269,6 @@ def _reactions_of(forces: ImportedForces, support: int) -> Sequence[float]:
     return jumps
 
 
-def _record_take_down(model: Model, forces: ImportedForces) -> None:
-    """Record the load on each span by the file, and that it is not below that of the take-down."""
-    rows = []
-    V = forces.source.imported.envelope.V
-    for span, pieces in enumerate(forces.pieces, start=1):
-        loads = V[:, pieces[0].i] - V[:, pieces[-1].j]
-        row = int(loads.argmax())
-        ours, combination = _take_down(model, span)
-        origin = f"{forces.source.name}, {forces.cases[row]}"
-        _check_load(model, span, combination, typed(float(loads[row]), "kN"), origin)
-        rows.append([
-            str(span), _number(float(loads[row]), "kN"), str(forces.cases[row]),
-            _number(ours, "kN"), combination.name, f"{loads[row] / ours:.2f}" if ours > 0 else "–",
-        ])  # fmt: skip
-    model.sheet.table(
-        "imported-loads", _LOAD_COLUMNS, rows,
-        title="Largest load on each span, by the file and by the load take-down",
-    )  # fmt: skip
-    model.sheet.note("imported-loads-text", _TAKE_DOWN, title="Loads of the file")
-
-
-def _check_load(model: Model, span: int, combination: Combination, load: str, origin: str) -> None:
-    """Record that the largest load of the file on a span is that of the take-down, or nearly."""
-    sheet = model.sheet
-    what = f"largest load on span {span}"
-    made = numbered(f"W_f{span}", "W", f"f{span}", f"{what}, by the file")
-    taken = numbered(f"W_d{span}", "W", f"d{span}", f"{what}, by the load take-down")
-    sheet.notation = sheet.notation | notation((made, taken))
-    terms = []
-    for kind, factor in combination.factors:
-        uniform = model.uniform.get((kind, span))
-        single = [_load_of(load) for load in model.on_span(span) if load.kind == kind]
-        whole = [] if uniform is None else [f"{uniform.symbol}*l_{span}"]
-        terms += [f"{factor:g}*{each}" for each in (*whole, *single)]
-    if not terms:
-        return
-    sheet.line(
-        stated(
-            f"W_d{span} = {' + '.join(terms)}", clause="NBC 4.1.3.2",
-            title=f"Largest load on span {span} by the load take-down: {combination.name}",
-        )
-    )  # fmt: skip
-    sheet.given(f"W_f{span}", load, source=origin)
-    sheet.check(
-        stated_check(
-            f"{LEAST_LOAD}*W_d{span} <= W_f{span}", "kN", key=f"imported-load-{span}",
-            title=f"Load of the file on span {span} against the load take-down",
-            yes="The file carries the load of the take-down, or nearly.",
-            no="The file does NOT carry the load of the take-down: its loads are not factored, or "
-            "of another beam, or a combination is left out.",
-        )
-    )  # fmt: skip
-
-
-def _load_of(load: SingleLoad) -> str:
-    """Return the whole of a single load as a term."""
-    n = load.number
-    return load.name if load.start is None else f"{load.name}*(e_x{n} - s_x{n})"
-
-
-def _take_down(model: Model, span: int) -> tuple[float, Combination]:
-    """Return the largest factored load on a span by the load take-down, and its combination."""
-    total: dict[str, float] = {}
-    for (kind, k), entry in model.uniform.items():
-        if k == span:
-            total[kind] = total.get(kind, 0.0) + entry.value * model.lengths[span - 1].value
-    for load in model.on_span(span):
-        total[load.kind] = total.get(load.kind, 0.0) + load.total
-    sums = [
-        (sum(factor * total.get(kind, 0.0) for kind, factor in combination.factors), combination)
-        for combination in factored_combinations(total)
-    ]
-    most, combination = max(sums, key=lambda each: each[0])
-    return most, combination
-
-
 def _reactions_text(file: ForcesFile) -> str:
     origin = (
         f"from {file.reactions_name}"
@@ -374,8 +280,3 @@ def _reactions_text(file: ForcesFile) -> str:
         "unfactored, for the design of what carries the beam are to be taken from the frame "
         "analysis."
     )
-
-
-def _number(value: float, unit: str) -> str:
-    """Return a value to four digits; below 1 N or 1 N.mm it is round-off and prints as 0."""
-    return in_unit(value, unit, _DIGITS) if abs(value) >= 1.0 else "0"
