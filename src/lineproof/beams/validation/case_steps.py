@@ -2,13 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Callable, Iterator, Mapping
 from contextlib import contextmanager
 from decimal import ROUND_UP, Context
 from typing import Any
 
 from lineproof.beams.steps import Steps
-from lineproof.beams.validation.data import HALF_UNIT, Case, Published, shown
+from lineproof.beams.validation.data import HALF_UNIT, Case, Published, cases, shown
 from lineproof.beams.validation.notation import PUBLISHED
 from lineproof.formula import Criterion, Formula, criterion
 from lineproof.record import Entry, Procedure
@@ -133,6 +133,10 @@ def agreement(symbol: str, published: Published, unit: str) -> Criterion:
     )
 
 
+Predict = Callable[[CaseSteps], None]
+"""Records the prediction of a case from what it gives."""
+
+
 @contextmanager
 def recorded(sheet: Sheet, case: Case) -> Iterator[CaseSteps]:
     """Open the part of a case and say what it is compared with."""
@@ -142,3 +146,12 @@ def recorded(sheet: Sheet, case: Case) -> Iterator[CaseSteps]:
             "source", f"{case.source}; {case.basis}. Code: {case.code}.{note}", title="Source"
         )
         yield CaseSteps(sheet, case)
+
+
+def record_cases(sheet: Sheet, predicted: Mapping[str, Predict]) -> None:
+    """Record published cases, a part for each: what it gives, the prediction, the comparison."""
+    for name, predict in predicted.items():
+        with recorded(sheet, cases()[name]) as steps:
+            steps.give()
+            predict(steps)
+            steps.compare()

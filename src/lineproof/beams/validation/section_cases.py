@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from functools import partial
 
-from lineproof.beams.validation.case_steps import CaseSteps, recorded
-from lineproof.beams.validation.data import cases
+from lineproof.beams.validation.case_steps import CaseSteps, Predict
 from lineproof.beams.validation.notation import notation_for
 from lineproof.formula import formula
-from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, crack_control, deflection, flange, hooks, shear
 
 _formula = partial(formula, notation=notation_for(frozenset()))
@@ -23,31 +22,20 @@ FORMULAS = (LEAST_STIRRUPS,)
 _BARS = ("15", "20", "25")
 
 
-def record_section_cases(sheet: Sheet) -> None:
-    """Record every published case of sections, a part for each."""
-    for name, record in _RECORDED.items():
-        with recorded(sheet, cases()[name]) as steps:
-            steps.give()
-            record(steps)
-
-
 def _c3(steps: CaseSteps) -> None:
     steps.own("A_tr1 = n_E*A_s", "Transformed area of the bars")
     steps.lines(deflection.AXIS, deflection.CRACKED)
     steps.own("f_ct = M_a*kd/I_cr", "Stress at the top of the concrete")
     steps.own("f_st = n_E*M_a*(d - kd)/I_cr", "Stress in the bars")
-    steps.compare()
 
 
 def _d1(steps: CaseSteps) -> None:
     steps.lines(flange.AREA_TEE, flange.CENTROID_TEE, flange.CENTROID_TOP, flange.INERTIA_TEE)
     steps.line(flange.CRACKING_BOTTOM)
-    steps.compare()
 
 
 def _n3(steps: CaseSteps) -> None:
     steps.lines(flange.AREA_TEE, flange.CENTROID_TEE, flange.CENTROID_TOP, flange.INERTIA_TEE)
-    steps.compare()
 
 
 def _g1(steps: CaseSteps) -> None:
@@ -60,14 +48,12 @@ def _g1(steps: CaseSteps) -> None:
     steps.own(
         "A_v45 = (V_u/0.75 - V_c)*s/(f_y*d_v*cot(theta))", "Stirrup legs that the shear requires"
     )
-    steps.compare()
 
 
 def _h2(steps: CaseSteps) -> None:
     for size in _BARS:
         d_b = steps.lookup(f"d_b{size}", bars.BARS, f"{size}M", "d_b")
         steps.line(hooks.BASIC, f"l_h{size}", d_b=d_b)
-    steps.compare()
 
 
 def _i1(steps: CaseSteps) -> None:
@@ -76,17 +62,15 @@ def _i1(steps: CaseSteps) -> None:
     steps.line(crack_control.Z)
     steps.lookup("z_max", crack_control.LIMITS, "interior")
     steps.lookup("z_maxe", crack_control.LIMITS, "exterior", "z_max")
-    steps.compare()
 
 
 def _j2(steps: CaseSteps) -> None:
     steps.lines(flange.INERTIA_RECTANGLE, flange.CENTROID_RECTANGLE, deflection.CRACKING_BOTTOM)
     steps.lines(deflection.AXIS, deflection.CRACKED, deflection.MOMENT_SIMPLE)
     steps.lines(deflection.EFFECTIVE, deflection.SIMPLE_SPAN)
-    steps.compare()
 
 
-_RECORDED = {
+SECTION_CASES: Mapping[str, Predict] = {
     "C3": _c3, "D1": _d1, "N3": _n3, "G1": _g1, "H2": _h2, "I1": _i1, "J2": _j2,
 }  # fmt: skip
-SECTION_CASES = tuple(_RECORDED)
+"""How every case is predicted, by its id."""

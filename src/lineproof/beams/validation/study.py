@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from lineproof.beams.floor_beam import prepare
 from lineproof.beams.inputs import InputReader
+from lineproof.beams.validation.case_steps import record_cases
 from lineproof.beams.validation.data import cases
-from lineproof.beams.validation.flexure_cases import FLEXURE_CASES, record_flexure_cases
-from lineproof.beams.validation.frame_cases import FRAME_CASES, record_frame_cases
+from lineproof.beams.validation.flexure_cases import FLEXURE_CASES
+from lineproof.beams.validation.frame_cases import FRAME_CASES
 from lineproof.beams.validation.notation import notation_for
 from lineproof.beams.validation.results import AGREEMENT, TESTS, record_agreement, record_tests
-from lineproof.beams.validation.section_cases import SECTION_CASES, record_section_cases
+from lineproof.beams.validation.section_cases import SECTION_CASES
 from lineproof.beams.validation.strength_tests import (
     BENDING_TESTS,
     MODEL,
@@ -51,15 +52,15 @@ class ValidationStudy:
 
     def flexure(self) -> None:
         """Record the published cases of bending."""
-        record_flexure_cases(self.sheet)
+        record_cases(self.sheet, FLEXURE_CASES)
 
     def sections(self) -> None:
         """Record the published cases of sections, shear, hooks, cracks and deflection."""
-        record_section_cases(self.sheet)
+        record_cases(self.sheet, SECTION_CASES)
 
     def frames(self) -> None:
         """Record the published cases of continuous beams."""
-        record_frame_cases(self.sheet)
+        record_cases(self.sheet, FRAME_CASES)
 
     def agreement(self) -> None:
         """Record the table of predicted against published values."""
