@@ -229,12 +229,6 @@ DEFLECTION = (
 # Stages. Point loads: 40 kN at 2 m on 8 m: simple span, P a (3 l^2 - 4 a^2)/48
 # = 40*2*(192 - 16)/48 = 293.333; 5 l^2/48 (P a/2 + M_P) = 6.66667*(40 + 4) = 293.333
 STAGES = (
-    W(
-        "deflection_stages.STAGE_SUSTAINED",
-        {"M_sD": 80, "r_Ls": 0.5, "M_sL": 60},
-        "80 + 0.5*60 = 110",
-    ),
-    W("deflection_stages.STAGE_ALL", {"M_sD": 80, "M_sL": 60}, "80 + 60 = 140"),
     W("deflection_stages.LARGEST_SO_FAR", {"M_s": 80, "M_ae": 95}, "max(80, 95) = 95.0"),
     W(
         "deflection_stages.CRACKING_WEB",

@@ -17,15 +17,15 @@ NOT_IN_LINE = (
 TWO_SIZES = "The distance between them is taken as if all of a layer had the larger size."
 
 
-def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) -> Entry:
-    """Record bottom bars in one or two layers and the effective depth; return the depth.
+def record_bars(sheet: Sheet, layers: BarLayers, *, stirrup: str, chosen: bool) -> None:
+    """Record bottom bars in one or two layers and the effective depth.
 
     ``chosen`` tells whether the bars were proposed here or given by the designer. Whether they
     fit is the last check of each layer.
     """
     origin = "chosen: few sizes, one layer before two, then least mass" if chosen else "given"
     with sheet.part(BARS, "Bottom bars and effective depth"):
-        return bars_inside(sheet, layers, stirrup=stirrup, origin=origin)
+        bars_inside(sheet, layers, stirrup=stirrup, origin=origin)
 
 
 def bars_inside(sheet: Sheet, layers: BarLayers, *, stirrup: str, origin: str) -> Entry:

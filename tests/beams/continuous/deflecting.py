@@ -3,14 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from decimal import Decimal
 from typing import Any
 
 from lineproof.beams.analysis.model import Beam, Load, PartialLoad, PointLoad, Span, Support
 from lineproof.beams.continuous import deflection as numbers
 from lineproof.beams.continuous import deflection_record as record
 from lineproof.beams.continuous.deflection_local import LocalLoad
-from lineproof.beams.continuous.deflection_moments import given_moments
-from lineproof.beams.continuous.deflection_service import ServiceMoments
+from lineproof.beams.continuous.deflection_service import ServiceMoments, Stage
+from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import flange, materials
@@ -26,6 +27,7 @@ FLOOR = "floor, nothing attached that deflection damages"
 PARTITIONS = numbers.DAMAGED
 SYMBOLS = {"": ("M_m", "M_h1", "M_h2"), "left": ("M_h", "M_mb", "M_hb")}
 SYMBOLS["right"] = SYMBOLS["left"]
+EARLIER = ("M_aem", "M_ae1", "M_ae2")
 
 
 def gross() -> tuple[float, float]:
@@ -143,14 +145,14 @@ def _place(sheet: Sheet, number: int, name: str, place: numbers.Place) -> dict[s
 
 def record_span(
     sheet: Sheet, entries: record.SpanEntries, service: ServiceMoments, **choices: Any
-) -> record.RecordedDeflection:
+) -> None:
     """Record the deflections of a span with the moments given."""
     if entries.free:
         symbols: tuple[str, ...] = SYMBOLS[entries.free] if entries.behind else ("M_h",)
     else:
         symbols = ("M_m", *(f"M_h{end}" for end in entries.ends))
-    moments = given_moments(service, "analysis of the test", symbols)
-    return record.record_deflection(
+    moments = given_moments(service, symbols)
+    record.record_deflection(
         sheet,
         entries,
         moments,
@@ -158,3 +160,19 @@ def record_span(
         lifting=service.lifting,
         **choices,
     )
+
+
+def given_moments(service: ServiceMoments, symbols: tuple[str, ...]) -> record.Moments:
+    """Return moments of the stages as given values; ``symbols`` names those that the span has."""
+
+    def give(steps: Steps, stage: Stage) -> None:
+        moments = service.stages[stage]
+        # The root of a cantilever stands where a span has its left support.
+        values = {s: getattr(moments, "M_h1" if s == "M_h" else s) for s in symbols}
+        values |= {s: v for s, v in zip(EARLIER, moments.earlier, strict=True) if v}
+        for symbol, value in values.items():
+            text = f"{Decimal(repr(value)).scaleb(-6):f} kN.m"
+            made = steps.sheet.given(symbol, text, unit="kN.m", source="analysis of the test")
+            steps.bind(**{symbol: made})
+
+    return give

@@ -18,7 +18,7 @@ from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.analysis.solve import Row
 from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.anchorage_record import plain
-from lineproof.beams.continuous.deflection_record import WORDS, RecordedDeflection
+from lineproof.beams.continuous.deflection_record import WORDS
 from lineproof.beams.continuous.deflection_service import ServiceMoments, deflection_key
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.geometry import span_place
@@ -154,9 +154,7 @@ def cracking_moments(model: Model, span: int) -> dict[Face, float]:
     return made
 
 
-def record_hinge(
-    design: Design, hinge: Hinge, earlier: Mapping[str, Entry], name: str
-) -> RecordedDeflection:
+def record_hinge(design: Design, hinge: Hinge, earlier: Mapping[str, Entry], name: str) -> None:
     """Record, in place of the limits, the check that fails for want of stiffness."""
     model, key = design.model, deflection_key(hinge.span)
     sheet = model.sheet
@@ -175,19 +173,17 @@ def record_hinge(
             earlier=earlier,
         )  # fmt: skip
         args: dict[str, Any] = {"M_a": M_a, limit.symbol: limit}
-        check = sheet.check(stages.WHOLE_TOP if top else stages.WHOLE, **args)
-    return RecordedDeflection(check, entries=sheet.entries_of(key))
+        sheet.check(stages.WHOLE_TOP if top else stages.WHOLE, **args)
 
 
-def record_beside(sheet: Sheet, span: int, name: str, hinge: int) -> RecordedDeflection:
+def record_beside(sheet: Sheet, span: int, name: str, hinge: int) -> None:
     """Record, in place of the limits, that a span continuous with a hinge is given none."""
     (found,) = stiffness_checks(sheet, hinge)
     with sheet.part(deflection_key(span), f"Deflection of {name}: not given"):
         text = _BESIDE.format(hinge=hinge)
         sheet.note("no-stiffness", text, title="Deflection", basis=MECHANICS)
         args: dict[str, Any] = dict(zip(found.source.names, found.args, strict=True))
-        check = sheet.check(found.source, title=_TITLE.format(hinge=hinge), **args)
-    return RecordedDeflection(check)
+        sheet.check(found.source, title=_TITLE.format(hinge=hinge), **args)
 
 
 def stiffness_checks(sheet: Sheet, span: int) -> list[Entry]:

@@ -10,7 +10,7 @@ from lineproof.beams.continuous.deflection import History
 from lineproof.beams.continuous.deflection_local import LocalLoad, points_at
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, Criterion
-from lineproof.record import Entry, Procedure
+from lineproof.record import Procedure
 from lineproof.sentences import begun
 from lineproof.standards.a23_3 import deflection as clause
 from lineproof.standards.a23_3 import deflection_stages as stages
@@ -55,8 +55,8 @@ def record_limits(
     lifting: str,
     local: Sequence[LocalLoad],
     ends: Sequence[str],
-) -> tuple[Entry, Entry | None]:
-    """Record inside the open part long-term parts and checks; return those of sag and rise."""
+) -> None:
+    """Record inside the open part long-term parts and the checks of sag and rise."""
     sheet = steps.sheet
     cantilever = row.endswith("cantilever")
     sheet.note("carries", f"The span carries: {carries}.", title="Limit of Table 9.3")
@@ -69,23 +69,21 @@ def record_limits(
     steps.lines(clause.LIVE, clause.REST_OF_LIVE, clause.TOTAL, clause.AFTER_ATTACHMENT)
     steps.bind(k_D=sheet.lookup("k_D", clause.LIMITS, carries))
     steps.line(clause.LARGEST)
-    check = steps.check(clause.LIVE_SMALL if by_live else clause.ATTACHED_SMALL)
-    rise = _record_rise(steps, lifting, by_live=by_live)
+    steps.check(clause.LIVE_SMALL if by_live else clause.ATTACHED_SMALL)
+    _record_rise(steps, lifting, by_live=by_live)
     steps.line(stages.CAMBER)
     sheet.note("camber", _CAMBER, title="Camber", clause="9.8.2.6", basis=FROM_MEMORY)
     if not cantilever and all(f"I_cr{place}" in steps.place for place in ("m", *ends)):
         sheet.note("beside", _BESIDE, title="Curvature", basis=COMMON_PRACTICE)
         _record_curvature(steps, ends, local)
-    return check, rise
 
 
-def _record_rise(steps: Steps, lifting: str, *, by_live: bool) -> Entry | None:
+def _record_rise(steps: Steps, lifting: str, *, by_live: bool) -> None:
     note = _RISE.format(lifting) if lifting else _NO_RISE
     steps.sheet.note("rise", note, title="Rise", basis=COMMON_PRACTICE)
-    if not lifting:
-        return None
-    steps.line(stages.RISE if by_live else stages.RISE_ATTACHED)
-    return steps.check(stages.RISE_SMALL)
+    if lifting:
+        steps.line(stages.RISE if by_live else stages.RISE_ATTACHED)
+        steps.check(stages.RISE_SMALL)
 
 
 def _time(row: str) -> str:

@@ -8,7 +8,7 @@ nothing that deflection damages has only the last one.
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from typing import Any
 
 from lineproof.beams.continuous.deflection import (
@@ -102,15 +102,6 @@ class SpanEntries:
         return {end: bound for end, bound in pairs.items() if bound is not None}
 
 
-@dataclass(frozen=True)
-class RecordedDeflection:
-    """The check that limits the deflection, or the decision that none is needed; and the rise."""
-
-    check: Entry
-    rise: Entry | None = None
-    entries: Mapping[str, Entry] = field(default_factory=dict)
-
-
 def record_deflection(
     sheet: Sheet,
     span: SpanEntries,
@@ -121,7 +112,7 @@ def record_deflection(
     history: History | None = None,
     arrangement: str = "",
     calculate: bool = False,
-) -> RecordedDeflection:
+) -> None:
     """Record the deflections of one span; ``arrangement`` says in words where live load lies.
 
     ``lifting`` says where it lies to lift the span, where that may govern (the stage "rise" is then
@@ -132,7 +123,8 @@ def record_deflection(
     steps = Steps(sheet, span.span)
     if not (calculate or is_calculated(sheet, span, carries)):
         with sheet.part(key, f"Deflection of {span.name}"):
-            return RecordedDeflection(_record_depth(steps, span))
+            _record_depth(steps, span)
+        return
     with sheet.part(f"{key}-sections", f"Deflection of {span.name}: cracked sections"):
         if carries != DAMAGED:
             _record_depth(steps, span)
@@ -148,12 +140,11 @@ def record_deflection(
             steps.bind(**only(own.place, ("M_m", "M_h1", "M_h2", "M_h")))
     steps.bind(**_ratio_rests_on(steps, span))
     with sheet.part(key, f"Deflection of {span.name}: limits"):
-        check, rise = record_limits(
+        record_limits(
             steps, span.row, carries=carries, history=history or History(),
             by_live=carries in LIVE_LIMITS, arrangement=arrangement, lifting=lifting,
             local=span.local, ends=tuple(span.ends),
         )  # fmt: skip
-    return RecordedDeflection(check, rise, sheet.entries_of(key))
 
 
 def is_calculated(sheet: Sheet, span: SpanEntries, carries: str) -> bool:

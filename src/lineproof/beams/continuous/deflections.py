@@ -7,7 +7,6 @@ from dataclasses import replace
 
 from lineproof.beams.continuous.deflection import History
 from lineproof.beams.continuous.deflection_hinges import (
-    Hinge,
     continuous_with,
     hinge_of,
     record_beside,
@@ -15,7 +14,6 @@ from lineproof.beams.continuous.deflection_hinges import (
 )
 from lineproof.beams.continuous.deflection_local import LocalLoad
 from lineproof.beams.continuous.deflection_record import (
-    RecordedDeflection,
     SpanEntries,
     is_calculated,
     record_deflection,
@@ -66,7 +64,7 @@ def record_not_covered(sheet: Sheet) -> None:
         sheet.note("not-covered", _NOT_COVERED, title="Deflections", clause="9.8")
 
 
-def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
+def record_deflections(design: Design) -> None:
     """Record the deflections of every span; a cantilever after the span behind it.
 
     Where hogging cracks a midspan, the top bars that run through it are recorded before. A span
@@ -78,15 +76,16 @@ def record_deflections(design: Design) -> dict[int, RecordedDeflection]:
     found = {span: hinge_of(design, span, services) for span in services}
     hinges = {span: hinge for span, hinge in found.items() if hinge is not None}
     beside = continuous_with(model, tuple(hinges))
-    made = {span: _record_hinge(design, hinge) for span, hinge in hinges.items()}
-    for span, hinge in sorted(beside.items()):
-        made[span] = record_beside(model.sheet, span, name_of(model, span), hinge)
+    for hinge in hinges.values():
+        earlier = _earlier(model, hinge.span) if hinge.loading.building else {}
+        record_hinge(design, hinge, earlier, name_of(model, hinge.span))
+    for span, of_hinge in sorted(beside.items()):
+        record_beside(model.sheet, span, name_of(model, span), of_hinge)
     order = sorted(range(1, model.spans + 1), key=lambda k: (model.forces.beam.cantilever(k), k))
     wanted = {span_behind(model.forces.beam, k) for k in order if model.forces.beam.cantilever(k)}
     for span in order:
-        if span not in made:
-            made[span] = _record_span(design, services[span], r_Ls, asked=span in wanted)
-    return made
+        if span not in hinges and span not in beside:
+            _record_span(design, services[span], r_Ls, asked=span in wanted)
 
 
 def name_of(model: Model, span: int) -> str:
@@ -94,14 +93,7 @@ def name_of(model: Model, span: int) -> str:
     return span_name(span, free_end(model.forces.beam, span))
 
 
-def _record_hinge(design: Design, hinge: Hinge) -> RecordedDeflection:
-    earlier = _earlier(design.model, hinge.span) if hinge.loading.building else {}
-    return record_hinge(design, hinge, earlier, name_of(design.model, hinge.span))
-
-
-def _record_span(
-    design: Design, service: ServiceMoments, r_Ls: Entry, *, asked: bool
-) -> RecordedDeflection:
+def _record_span(design: Design, service: ServiceMoments, r_Ls: Entry, *, asked: bool) -> None:
     model, span = design.model, service.span
     free = free_end(model.forces.beam, span)
     if not free:
@@ -112,7 +104,7 @@ def _record_span(
     before = earlier["M_aem"].value if "M_aem" in earlier else 0.0
     if asked and not free and hogging_cracks(model, span, service.stages, before):
         entries = replace(entries, top=record_top(design, span))
-    return record_deflection(
+    record_deflection(
         model.sheet,
         entries,
         service_lines(model, service, entries.behind, earlier),

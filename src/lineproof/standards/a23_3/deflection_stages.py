@@ -19,20 +19,6 @@ from lineproof.standards.references import DEFLECTION_QUOTED, MECHANICS
 _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
 
-STAGE_SUSTAINED = _formula(
-    "M_s = M_sD + r_Ls*M_sL",
-    clause="9.8.2.3",
-    title="Moment due to dead load and sustained live load",
-    basis=MECHANICS,
-    system="kN-m",
-)
-STAGE_ALL = _formula(
-    "M_s = M_sD + M_sL",
-    clause="9.8.2.3",
-    title="Moment due to dead load and all live load",
-    basis=MECHANICS,
-    system="kN-m",
-)
 LARGEST_SO_FAR = _formula(
     "M_a = max(M_s, M_ae)",
     clause="9.8.2.3",
@@ -259,7 +245,7 @@ BOUND_BOTH_ENDS = _BOUND(
 )
 
 FORMULAS = (
-    STAGE_SUSTAINED, STAGE_ALL, LARGEST_SO_FAR, HOGGING_SIZE, CRACKING_WEB, GROSS, SIMPLE_SPAN,
+    LARGEST_SO_FAR, HOGGING_SIZE, CRACKING_WEB, GROSS, SIMPLE_SPAN,
     ONE_END_SPAN, CANTILEVER_BENDING, ROOT_ROTATION, TIP, TIP_FIXED, FROM_NEARER, FROM_RIGHT,
     POINT_LOAD, POINT_LOAD_CANTILEVER, POINT_LOAD_BEHIND, WITH_LOCAL_LOADS, HALF_OF_PARTIAL,
     FIRST_POINT, SECOND_POINT, MIDDLE, LONG_TERM_PLAIN, LONG_TERM_ATTACHED_PLAIN, RISE,

@@ -265,8 +265,6 @@ _ROWS = (
     ("delta_t", "Δ", "t", "", "total deflection", "mm"),
     # deflection by stages of loading
     ("M_s", "M", "s", "", "moment due to the load of the stage", "kN.m"),
-    ("M_sD", "M", "sD", "", "moment due to specified dead load", "kN.m"),
-    ("M_sL", "M", "sL", "", "moment due to specified live load where it deflects most", "kN.m"),
     ("M_ae", "M", "a,e", "", "largest moment of earlier stages, construction included", "kN.m"),
     ("M_am", "M", "a,m", "", "largest moment at midspan up to the stage", "kN.m"),
     ("M_a1", "M", "a1", "", "largest negative moment at the first end up to the stage", "kN.m"),
