@@ -166,18 +166,6 @@ CUTOFF = (
     ),
     W("cutoff.EXTENSION_PLAIN", {"d": 535, "d_b": 25.2}, "max(535, 302.4) = 535"),
     W("cutoff.EXTENSION_PLAIN", {"d": 250, "d_b": 25.2}, "max(250, 12*25.2) = 302.4"),
-    # check no. 9b at a span section: 160/0.4815 + 156.1*cot(35) = 332.3 + 222.9
-    W(
-        "cutoff.TENSION",
-        {"M_f": 160, "d_v": 481.5, "V_f": 260, "V_s": 207.8, "theta": 35},
-        "160/0.4815 + (260 - 103.9)*cot(35) = 555.2",
-        "independent check no. 9b",
-    ),
-    W(
-        "cutoff.TENSION",
-        {"M_f": 160, "d_v": 481.5, "V_f": 200, "V_s": 207.8, "theta": 35},
-        "160/0.4815 + 100*cot(35) = 475.1",
-    ),
     W(
         "cutoff.TENSION_OTHER_SIDE",
         {"M_f": 48.15, "d_v": 481.5, "V_f": 260, "V_s": 207.8, "theta": 35},

@@ -162,6 +162,11 @@ LONGITUDINAL = (
         CHECK_9 + "b",
     ),
     W(
+        "shear_bars.TENSION_SIDE",
+        {"M_f": 160, "d_v": 481.5, "V_f": 200, "V_s": 207.8, "theta": 35},
+        "160/0.4815 + 100*cot(35) = 475.1",
+    ),
+    W(
         "shear_bars.TENSION_SIDE_CAPPED",
         {"F_lt": 555.2, "phi_s": 0.85, "A_sr": 1500, "f_y": 400},
         "min(555.2, 0.85*1500*0.4) = min(555.2, 510) = 510.0",

@@ -224,7 +224,7 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
         _record_shear(writers, steps, station.x - station.local + demand.x)
         helps = demand.M > 0 if face == "bottom" else demand.M < 0
         steps.bind(d_v=d_v)
-        steps.line(clause.TENSION if helps else clause.TENSION_OTHER_SIDE)
+        steps.line(shear_bars.TENSION_SIDE if helps else clause.TENSION_OTHER_SIDE)
         if cap is None:
             laid.check(steps, shear_bars.TENSION_SIDE_HOLDS, station, tension=True)
             return

@@ -7,7 +7,7 @@ from functools import partial
 from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY, criterion, formula
 from lineproof.standards.a23_3.notation import NOTATION as A23_3
 from lineproof.standards.nbc.notation import NOTATION as NBC
-from lineproof.standards.references import MECHANICS, SHEAR_2004
+from lineproof.standards.references import MECHANICS
 
 _formula = partial(formula, notation=A23_3 | NBC)
 _criterion = partial(criterion, notation=A23_3 | NBC)
@@ -30,12 +30,6 @@ CONTINUING = _formula(
     clause="12.10.4",
     title="Length of continuing bars past that point",
     basis=FROM_MEMORY,
-)
-TENSION = _formula(
-    "F_lt = M_f/d_v + (V_f - 0.5*min(V_s, V_f))*cot(theta)",
-    clause="11.3.9.2",
-    title="Force in the bars on the tension side",
-    basis=SHEAR_2004,
 )
 TENSION_OTHER_SIDE = _formula(
     "F_lt = (V_f - 0.5*min(V_s, V_f))*cot(theta) - M_f/d_v",
@@ -258,7 +252,7 @@ PAST_FACE = _formula(
 )
 
 FORMULAS = (
-    TENSION, TENSION_OTHER_SIDE, EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD,
+    TENSION_OTHER_SIDE, EXTENSION, EXTENSION_PLAIN, CONTINUING, PAST_INWARD,
     PAST_OUTWARD, PAST_SUPPORT, CONTINUING_INWARD, CONTINUING_OUTWARD, CONTINUING_PAST_SUPPORT,
     IN_SUPPORT, PAST_CENTRE, PAST_INFLECTION, PAST_FACE, LIMIT, LIMIT_CONFINED,
     LENGTH_PAST_INFLECTION,
