@@ -23,13 +23,14 @@ BALANCED = "balanced"
 REQUIRED = "required-steel"
 FLEXURE = "flexure"
 YIELD_CLAUSE = "10.5.2"
-_LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
+LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
+"""What stands for bottom bars in one or two layers."""
 
 
 def midspan(sheet: Sheet, shape: Shape) -> Steps:
     """Return the steps at midspan: the bottom bars, compression at the top."""
     entries = sheet.entries_of(BARS)
-    place = compression_zone(sheet, shape) | {n: entries[n] for n in _LAYERS if n in entries}
+    place = compression_zone(sheet, shape) | {n: entries[n] for n in LAYERS if n in entries}
     return Steps(sheet, place)
 
 

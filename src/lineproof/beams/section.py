@@ -2,12 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from typing import Literal
 
 from lineproof.beams.inputs import Shape
+from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import flange
+from lineproof.standards.a23_3 import bars, flange, minimum
 
 SECTION = "section"
 _TITLES = {
@@ -15,6 +17,18 @@ _TITLES = {
     "L": "Effective flange and gross section",
     "rectangular": "Gross section",
 }
+SPREAD_AREAS: Mapping[Shape, Formula] = {
+    "T": bars.TOP_AREA_T,
+    "L": bars.TOP_AREA_L,
+    "rectangular": bars.TOP_AREA_RECTANGULAR,
+}
+"""Area of top bars, those in the overhangs too."""
+TENSION_WIDTHS: Mapping[Shape, Formula] = {
+    "T": minimum.WIDTH_FLANGE_T,
+    "L": minimum.WIDTH_FLANGE_L,
+    "rectangular": minimum.WIDTH_WEB,
+}
+"""Width in tension at the top, by which minimum reinforcement counts."""
 
 
 def record_section(sheet: Sheet, shape: Shape) -> None:

@@ -9,6 +9,7 @@ from lineproof.beams.flexure import record_yield, required, resistance
 from lineproof.beams.inputs import FloorBeamInputs, Shape
 from lineproof.beams.minimum_steel import minimum_of
 from lineproof.beams.second_path import record_proof
+from lineproof.beams.section import SPREAD_AREAS, TENSION_WIDTHS
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE
 from lineproof.sheet import Sheet
@@ -28,12 +29,6 @@ _RESTRAINT = {
     "cast with a girder": f"The beam is cast with a girder that restrains its end. {_ASSUMED}",
     "cast with a column": f"The beam is cast with a column that restrains its end. {_ASSUMED}",
 }
-_WIDTHS = {
-    "T": minimum.WIDTH_FLANGE_T,
-    "L": minimum.WIDTH_FLANGE_L,
-    "rectangular": minimum.WIDTH_WEB,
-}
-_AREAS = {"T": bars.TOP_AREA_T, "L": bars.TOP_AREA_L, "rectangular": bars.TOP_AREA_RECTANGULAR}
 
 
 def record_free_ends(sheet: Sheet) -> None:
@@ -73,7 +68,7 @@ def record_top_steel(
             steps,
             inputs.minimum_rule,
             minimum.BY_CRACKING_TOP,
-            _WIDTHS[shape],
+            TENSION_WIDTHS[shape],
             waivable=inputs.waive_minimum_at_ends,
         )
         if proof:
@@ -108,7 +103,7 @@ def _start(sheet: Sheet, inputs: FloorBeamInputs, web: BarLayer, overhang: int) 
     steps.lines(bars.LEAST_CLEAR, bars.CLEAR)
     steps.check(bars.FITS)
     record_bar_cover(steps)
-    steps.lines(_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
+    steps.lines(SPREAD_AREAS[inputs.shape], bars.DEPTH_ONE_LAYER)
     return steps
 
 

@@ -247,8 +247,8 @@ def test_bars_longer_than_stock() -> None:
     """By the cut length: 11 900 mm with two hooks is over 12 m, without hooks it is not."""
     long = BarRun("top", 1, 2, "25M", 0.0, 11900.0, hook_start="90", hook_end="90", mark="T01")
 
-    assert over_stock(bars(replace(long, hook_start="", hook_end=""))) == ()
-    (told,) = over_stock(bars(long))
+    assert over_stock(bars(replace(long, hook_start="", hook_end="")), "400R") == ()
+    (told,) = over_stock(bars(long), "400R")
     # 11 900 - 200.4 + 275.20 + 619.6 = 12 594.4
     assert "T01" in told
     assert "12600 mm" in told
@@ -351,7 +351,7 @@ def test_contradictions_are_told() -> None:
             StirrupZone(1, 1200.0, 7700.0, 27, 250.0, "10M"),
         ),
     )
-    told = " | ".join(contradictions(BEAM, given))
+    told = " | ".join(contradictions(BEAM, given, "400R"))
 
     assert "reaches outside the concrete, -225 to 24625 mm" in told
     # 225 + 43.7 + 524.4 = 793.1, up to 800 mm; 620 - 2 x (30 + 11.3) = 537 mm
@@ -359,10 +359,12 @@ def test_contradictions_are_told() -> None:
     assert "8 at 125 mm do not reach from 275 to 1300 mm" in told
     assert "crosses the face of a support at 7375 mm" in told
     assert "begins before" in told
-    assert contradictions(BEAM, detailing(BEAM)) == ()
+    assert contradictions(BEAM, detailing(BEAM), "400R") == ()
     ties = StirrupZone(1, -175.0, -25.0, 3, 75.0, "10M")
-    assert contradictions(BEAM, Detailing((), (ties,))) == ()
-    (outside,) = contradictions(BEAM, Detailing((), (replace(ties, start=-325.0, number=5),)))
+    assert contradictions(BEAM, Detailing((), (ties,)), "400R") == ()
+    (outside,) = contradictions(
+        BEAM, Detailing((), (replace(ties, start=-325.0, number=5),)), "400R"
+    )
     assert "from -325 to -25 mm reaches outside the concrete" in outside
 
 

@@ -42,25 +42,20 @@ from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.restraint import record_restraint
-from lineproof.beams.continuous.section_checks import (
-    SPREAD_AREAS,
-    TENSION_AREAS,
-    TENSION_WIDTHS,
-)
+from lineproof.beams.continuous.section_checks import TENSION_AREAS
 from lineproof.beams.continuous.skin import record_skin
 from lineproof.beams.cracks import cracks_inside
-from lineproof.beams.flexure import record_yield, required, resistance
+from lineproof.beams.flexure import LAYERS, record_yield, required, resistance
 from lineproof.beams.inputs import Shape
 from lineproof.beams.minimum_steel import minimum_of
 from lineproof.beams.second_path import record_proof
-from lineproof.beams.section import zone_of
+from lineproof.beams.section import SPREAD_AREAS, TENSION_WIDTHS, zone_of
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
 from lineproof.standards.a23_3 import analysis, bars, flexure, minimum
 from lineproof.standards.a23_3.crack_control import NEEDS_SKIN
 from lineproof.standards.references import MECHANICS
 
-_LAYERS = ("d", "A_s", "d_1", "d_2", "A_s1", "A_s2", "d_bs", "d_b", "A_b")
 _SHARED = ("M_r", "A_s", "d", "n_o", "A_b", "d_b", "d_bs")
 """What both faces of a support share where their section is the same."""
 _SAME = 1e-9
@@ -100,7 +95,7 @@ def record_sag(design: Design, span: int) -> None:
         if layers:
             origin = _origin(inputs, inputs.bottom_bars[span - 1])
             bars_inside(model.sheet, layers, stirrup=inputs.stirrup, origin=origin)
-            _take(steps, _LAYERS)
+            _take(steps, LAYERS)
         elif sags:
             note_gap(model.sheet, "bottom")
         else:

@@ -21,6 +21,7 @@ from lineproof.beams.continuous.inputs_together import (
     check_unit_weight,
 )
 from lineproof.beams.continuous.interface import SlabBars, read_slab_bars
+from lineproof.beams.continuous.shear_numbers import METHODS
 from lineproof.beams.continuous.typed_beam import (
     TypedLoad,
     TypedSupport,
@@ -56,7 +57,6 @@ from lineproof.standards.a23_3.materials import DENSITY_FACTORS
 from lineproof.standards.codes import CodePair
 from lineproof.standards.nbc.loads import USES
 
-METHODS = ("general", "simplified")
 AREA = Range("kPa", 0, 100, zero=True)
 SHARE = Range("", 0, 1, zero=True)
 UNIT_WEIGHT = Range("kN/m3", 10, 30)

@@ -10,13 +10,12 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.bending import BentShape, bent_bar, rounded
+from lineproof.beams.continuous.detailing_data import STOCK
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing, StirrupZone
 from lineproof.beams.continuous.schedule_served import served
 from lineproof.beams.continuous.schedule_stirrups import StirrupSet, stirrup_set
 from lineproof.standards.a23_3.bars import BARS
 
-STOCK = 12_000.0
-"""Usual stock length of bars [mm]."""
 LETTERS = {"bottom": "B", "top": "T", "side face": "F"}
 
 
@@ -89,19 +88,19 @@ def schedule(outline: BeamOutline, detailing: Detailing, grade: str = "400R") ->
     return Schedule(bars, stirrups, tuple(marked), Detailing(runs, zones))
 
 
-def shape_of(run: BarRun, grade: str = "400R") -> BentShape:
+def shape_of(run: BarRun, grade: str) -> BentShape:
     """Return the bent shape of the bars of a run."""
     return bent_bar(run.size, run.end - run.start, run.hook_start, run.hook_end, grade)
 
 
-def over_stock(detailing: Detailing, grade: str = "400R", stock: float = STOCK) -> tuple[str, ...]:
+def over_stock(detailing: Detailing, grade: str) -> tuple[str, ...]:
     """Return a sentence for each run whose cut length is more than the stock length [mm]."""
     return tuple(
         f"{run.mark or _kind(run)}: {run.number}-{run.size} has a cut length of "
-        f"{shape_of(run, grade).cut:.0f} mm, more than the stock length of {stock:.0f} mm; "
+        f"{shape_of(run, grade).cut:.0f} mm, more than the stock length of {STOCK:.0f} mm; "
         "it needs a lap"
         for run in detailing.bars
-        if shape_of(run, grade).cut > stock
+        if shape_of(run, grade).cut > STOCK
     )
 
 

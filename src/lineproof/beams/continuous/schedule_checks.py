@@ -12,9 +12,7 @@ SLACK = 1.0
 """mm: positions are whole millimetres."""
 
 
-def contradictions(
-    outline: BeamOutline, detailing: Detailing, grade: str = "400R"
-) -> tuple[str, ...]:
+def contradictions(outline: BeamOutline, detailing: Detailing, grade: str) -> tuple[str, ...]:
     """Return what cannot be built as given: bars outside the concrete, hooks too long, zones."""
     found: list[str] = []
     thickest = max((BARS.number(zone.size, "d_b") for zone in detailing.stirrups), default=0.0)

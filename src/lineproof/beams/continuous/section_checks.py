@@ -12,6 +12,7 @@ from dataclasses import dataclass
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars, centre_of, of_one_size, spaced
 from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation, value
 from lineproof.beams.inputs import Shape
+from lineproof.beams.section import SPREAD_AREAS, TENSION_WIDTHS
 from lineproof.formula import Formula
 from lineproof.standards.a23_3 import bars, crack_control, development, flexure, minimum
 from lineproof.standards.a23_3.bars import BARS
@@ -19,14 +20,6 @@ from lineproof.standards.a23_3.bars import BARS
 Checks = dict[str, float]
 """Utilisation of each check by its key: at most 1 where it holds."""
 
-SPREAD_AREAS: Mapping[Shape, Formula] = {
-    "T": bars.TOP_AREA_T, "L": bars.TOP_AREA_L, "rectangular": bars.TOP_AREA_RECTANGULAR,
-}  # fmt: skip
-TENSION_WIDTHS: Mapping[Shape, Formula] = {
-    "T": minimum.WIDTH_FLANGE_T,
-    "L": minimum.WIDTH_FLANGE_L,
-    "rectangular": minimum.WIDTH_WEB,
-}
 TENSION_AREAS: Mapping[Shape, Formula] = {
     "T": crack_control.TENSION_AREA_T,
     "L": crack_control.TENSION_AREA_L,
