@@ -179,6 +179,24 @@ def test_importing_lineproof_imports_nothing_heavy() -> None:
     assert not heavy & set(loaded)
 
 
+def test_notebooks_are_run_without_the_grammars_of_web_addresses() -> None:
+    """They take over a second to compile; notebooks are still checked, later imports find them."""
+    code = """
+import sys
+from lineproof.notebook.light_import import without_grammars
+with without_grammars():
+    import nbformat
+print("lark" in sys.modules, "rfc3987_syntax" in sys.modules)
+try:
+    nbformat.validate({"nbformat": 4, "nbformat_minor": 5, "metadata": 1, "cells": []})
+except nbformat.ValidationError:
+    print("checked")
+import rfc3987_syntax
+print("lark" in sys.modules)
+"""
+    assert run_python(code).split() == ["False", "False", "checked", "True"]
+
+
 def test_lineproof_offers_sheet_and_beams_on_first_use() -> None:
     code = "import lineproof as l; print(l.Sheet.__name__, l.beams.__name__, hasattr(l, 'x'))"
     assert run_python(code) == "Sheet lineproof.beams False"

@@ -10,6 +10,7 @@ from typing import Any
 
 from lineproof.errors import SHOWN_PREFIX, UserError
 from lineproof.notebook.cells import cells_of, joined
+from lineproof.notebook.light_import import without_grammars
 
 _LANGUAGE = {"file_extension": ".py", "mimetype": "text/x-python", "name": "python"}
 _KERNEL = {"display_name": "Python 3 (ipykernel)", "language": "python", "name": "python3"}
@@ -26,12 +27,13 @@ def execute(
     It runs in ``folder``; ``progress`` is told the number of code cells done and in all. Raises
     :class:`UserError` with the cell, and what it said, at the first cell that fails.
     """
-    import nbformat  # noqa: PLC0415 - Jupyter is imported on first use only
-    from nbclient.exceptions import (  # noqa: PLC0415 - as above
-        CellExecutionError,
-        CellTimeoutError,
-        DeadKernelError,
-    )
+    with without_grammars():
+        import nbformat  # noqa: PLC0415 - Jupyter is imported on first use only
+        from nbclient.exceptions import (  # noqa: PLC0415 - as above
+            CellExecutionError,
+            CellTimeoutError,
+            DeadKernelError,
+        )
 
     node: Any = nbformat.from_dict  # carries no types
     notebook = node(_cleared(data))
