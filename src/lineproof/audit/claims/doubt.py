@@ -22,8 +22,12 @@ def plausible(
     way: Other | None = None,
     *,
     places: bool = False,
+    loosely: bool = False,
 ) -> tuple[Slip, Cause] | None:
     """Return the likeliest slip that gives a claim to its last digit, and which of its causes.
+
+    ``loosely`` takes what gives it within the digits of its arguments: beside a reading that rests
+    on other values than those claimed.
 
     None if there is none. Only mistakes that a checker knows by name count, made in the line
     itself: of slips that have as many ways as a number has digits, a place other quantities, or a
@@ -35,8 +39,8 @@ def plausible(
     def known(cause: Cause) -> bool:
         return cause.usual or (places and _is_elsewhere(graph, cause))
 
-    exact = (slip for slip in slips if claim.stands_for.holds(slip.value))
-    pairs = ((slip, cause) for slip in exact for cause in slip.causes)
+    near = (slip for slip in slips if loosely or claim.stands_for.holds(slip.value))
+    pairs = ((slip, cause) for slip in near for cause in slip.causes)
     return next(
         (p for p in pairs if known(p[1]) and not _is_same(graph, p[1], claim) and _counts(*p, way)),
         None,

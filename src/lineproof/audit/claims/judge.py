@@ -21,6 +21,7 @@ from lineproof.audit.claims.twins import twins_of
 from lineproof.audit.claims.worlds import Worlds, claimed_above, unmoved_lines
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
+from lineproof.audit.slips.rank import reproduced
 from lineproof.record.entry import DECISION
 from lineproof.typeset.values import told
 
@@ -292,7 +293,8 @@ class _Judge:
                 safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
                 if rounded.usual or safe:
                     said = self._rounded(node, claim, judged, rounded, safe=safe)
-                    return self._beside_a_slip(node, claim, said, places=safe is False)
+                    elsewhere = not judged.follows.holds(rounded.of)
+                    return self._beside_a_slip(node, claim, said, loosely=elsewhere)
         return None
 
     def _beside_a_slip(
@@ -302,15 +304,15 @@ class _Judge:
         read: Judged,
         way: Other | None = None,
         *,
-        places: bool = False,
+        loosely: bool = False,
     ) -> Judged:
         """Judge a line with a reading that is no error: doubtful where a slip is likely as well."""
-        slips = self._slips(node, claim)
-        found = plausible(self.graph, slips, claim, way, places=places)
+        slips, unsafe = self._slips(node, claim), read.verdict is Verdict.UNSAFE_ROUNDING
+        found = plausible(self.graph, slips, claim, way, places=unsafe, loosely=loosely)
         if found is None:
             return replace(read, slips=slips if read.verdict in WRONG else ())
         slip, cause = found
-        note = f"{read.note}; the same value is reproduced exactly with {cause.words}"
+        note = f"{read.note}; the same value is {reproduced(cause, slip.value, claim)}"
         return replace(read, verdict=Verdict.DOUBTFUL, note=note, slips=first_of(slips, slip))
 
     def _in_doubt(self, entry_id: str) -> bool:

@@ -10,6 +10,7 @@ from typing import NamedTuple
 from lineproof.audit.data import Cause, Claim, Slip
 from lineproof.audit.slips.edits import Edit
 from lineproof.audit.slips.kinds import FAMILIES
+from lineproof.sentences import begun
 
 MOST = 8
 """So many slips of one line are told."""
@@ -125,9 +126,14 @@ def _equal(first: float, second: float) -> bool:
     return abs(first - second) <= _SAME * max(abs(first), abs(second))
 
 
+def reproduced(cause: Cause, value: float, claim: Claim) -> str:
+    """Say what gives the claimed value, and how nearly."""
+    how = "exactly" if claim.stands_for.holds(value) else "within the digits of its arguments"
+    return f"reproduced {how} with {cause.words}"
+
+
 def sentence_of(causes: Sequence[Cause], value: float, claim: Claim) -> str:
     """Say what gives the claimed value, and the other cause of the same value that is likeliest."""
     first, *others = causes
-    how = "exactly" if claim.stands_for.holds(value) else "within the digits of its arguments"
-    said = f"Reproduced {how} with {first.words}."
+    said = f"{begun(reproduced(first, value, claim))}."
     return f"{said} The same value comes with {others[0].words}." if others else said
