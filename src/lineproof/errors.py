@@ -32,6 +32,10 @@ class UserError(ValueError):
         return [f"{SHOWN_PREFIX}{fault}" for fault in self.faults]
 
 
+MOST_FAULTS = 40
+"""Of the faults of one file more are only counted."""
+
+
 class FaultList:
     """Collect faults and raise them together.
 
@@ -57,3 +61,22 @@ class FaultList:
         """Raise one :class:`UserError` with every fault noted so far."""
         if self.faults:
             raise UserError(self.faults)
+
+
+class FileFaults(FaultList):
+    """Faults of one file, each with its name; after the first forty only their number is told."""
+
+    def __init__(self, name: str) -> None:
+        super().__init__()
+        self.name = name
+
+    def add(self, fault: str) -> None:
+        """Note one fault of the file."""
+        super().add(f"{self.name}: {fault}")
+
+    def raise_if_any(self) -> None:
+        """Raise the first faults and the number of the others."""
+        more = len(self.faults) - MOST_FAULTS
+        if more > 0:
+            raise UserError([*self.faults[:MOST_FAULTS], f"{self.name}: and {more} faults more"])
+        super().raise_if_any()

@@ -2,20 +2,14 @@
 
 from __future__ import annotations
 
-import codecs
-import csv
-import io
-import re
 from collections.abc import Iterator, Mapping
 from dataclasses import replace
 from typing import Any
 
 from lineproof.drawing import Text, dxf, from_json, words
+from lineproof.package.csv_tables import csv_bytes, is_number, safe_cell
 from lineproof.record.validate_shown import FILES
 
-_NUMBER = re.compile(r"[+-]?\d+(?:\.\d+)?(?:[eE][+-]?\d+)?\Z", re.ASCII)
-_STARTS_A_FORMULA = ("=", "+", "-", "@", "\t", "\r", "\n", "＝", "＋", "－", "＠")
-"""With one of these a spreadsheet takes a cell for a formula."""
 _PLAIN = str.maketrans({"−": "-", "\u2009": "", "\u202f": ""})
 _LONGEST = 60
 _BELOW = 6.0
@@ -68,25 +62,15 @@ def _drawing(record: Mapping[str, Any], entry: Mapping[str, Any]) -> bytes:
 
 
 def table_csv(entry: Mapping[str, Any]) -> bytes:
-    """Return a table as CSV by RFC 4180, in UTF-8.
-
-    It begins with the mark of UTF-8, without which spreadsheets read "Ø" and "²" in the code page
-    of the machine.
-    """
-    stream = io.StringIO(newline="")
-    writer = csv.writer(stream, lineterminator="\r\n")
-    writer.writerow(map(_cell, entry["columns"]))
-    writer.writerows([_cell(text) for text in row] for row in entry["rows"])
-    return codecs.BOM_UTF8 + stream.getvalue().encode()
+    """Return a table as CSV, its numbers as a spreadsheet reads them."""
+    return csv_bytes(map(_cell, row) for row in (entry["columns"], *entry["rows"]))
 
 
 def _cell(text: str) -> str:
-    """Return a cell that a spreadsheet reads as a number or as text, never as a formula.
+    """Return a cell, a printed number with a plain minus and without spaces.
 
     >>> _cell("−12.5"), _cell("=1+1"), _cell("-2+3")
     ('-12.5', "'=1+1", "'-2+3")
     """
     number = text.translate(_PLAIN)
-    if _NUMBER.match(number):
-        return number
-    return f"'{text}" if text.lstrip(" ").startswith(_STARTS_A_FORMULA) else text
+    return number if is_number(number) else safe_cell(text)

@@ -11,12 +11,12 @@ from pathlib import Path
 
 from lineproof.audit.claims.bars import area_claimed, bars_in
 from lineproof.audit.claims.blank import quick_lines
-from lineproof.audit.claims.tables import MOST_FAULTS, Row, Table, TableFaults, read_with_faults
+from lineproof.audit.claims.tables import Row, Table, TableFaults, read_with_faults
 from lineproof.audit.claims.typed import DATE_ADVICE, is_date, read_claimed
 from lineproof.audit.data import Claim, read_from
 from lineproof.audit.effects import place_of
 from lineproof.audit.graph import Graph, Node
-from lineproof.errors import UserError
+from lineproof.errors import MOST_FAULTS, UserError
 from lineproof.quantity import echo, internal_factor
 
 CLAIMED = ("claimed", "value")
@@ -49,9 +49,9 @@ def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, .
     if column is None and lower:
         raise UserError(f"{table.name}: row {lower} holds the headings; delete the rows above it")
     if column is None:
-        faults.add(f"{table.name}: row 1: no heading 'claimed'; write 'id,claimed,unit'")
+        faults.add("row 1: no heading 'claimed'; write 'id,claimed,unit'")
     if not any(name in table.headings for name in NAMES):
-        faults.add(f"{table.name}: row 1: no heading 'id', 'label' or 'symbol'; write 'id'")
+        faults.add("row 1: no heading 'id', 'label' or 'symbol'; write 'id'")
     if column is None or not any(name in table.headings for name in NAMES):
         faults.raise_if_any()
     reader = _Reader(graph, faults)
@@ -61,7 +61,7 @@ def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, .
         if row.cells.get(column or "")
     ]
     if not claims and not faults.faults:
-        faults.add(f"{table.name}: no row has a value in the column {column!r}; write one")
+        faults.add(f"no row has a value in the column {column!r}; write one")
     faults.raise_if_any()
     return tuple(claim for claim in claims if claim is not None)
 

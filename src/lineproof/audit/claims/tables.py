@@ -15,7 +15,8 @@ from dataclasses import dataclass
 from pathlib import Path
 
 from lineproof.audit.claims.workbooks import read_workbook, workbook_bytes
-from lineproof.errors import FaultList, UserError
+from lineproof.errors import FileFaults, UserError
+from lineproof.package.csv_tables import STARTS_A_FORMULA, csv_bytes, safe_cell
 from lineproof.quantity import echo
 from lineproof.resources import csv_text, open_file
 
@@ -24,12 +25,8 @@ MOST_ROWS = 20_000
 """Rows of a table: more than ten times those of the longest record."""
 MOST_COLUMNS = 60
 LONGEST_CELL = 500
-MOST_FAULTS = 40
 XLSX, CSV = ".xlsx", ".csv"
 _MACROS = (".xlsm", ".xltm", ".xlam", ".xlsb")
-_NUMBER = re.compile(r"[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d{1,3})?", re.ASCII)
-_STARTS = ("=", "+", "-", "@", "\t", "\r", "\n", "＝", "＋", "－", "＠")
-"""With one of these a spreadsheet takes a cell for a formula."""
 _SEPARATOR = re.compile(r"sep=([,;\t])\r?\n", re.IGNORECASE)
 _UTF_16 = (codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE)
 
@@ -51,23 +48,12 @@ class Table:
     rows: tuple[Row, ...]
 
 
-class TableFaults(FaultList):
-    """Faults of one table; after the first forty only their number is told."""
-
-    def __init__(self, name: str) -> None:
-        super().__init__()
-        self.name = name
+class TableFaults(FileFaults):
+    """Faults of one table."""
 
     def at(self, row: int, column: str, fault: str) -> None:
         """Note a fault of one cell."""
-        self.add(f"{self.name}: row {row}, {column}: {fault}")
-
-    def raise_if_any(self) -> None:
-        """Raise the first faults and the number of the others."""
-        if len(self.faults) > MOST_FAULTS:
-            more = len(self.faults) - MOST_FAULTS
-            raise UserError([*self.faults[:MOST_FAULTS], f"{self.name}: and {more} faults more"])
-        super().raise_if_any()
+        self.add(f"row {row}, {column}: {fault}")
 
 
 def read_table(path: Path) -> Table:
@@ -146,11 +132,8 @@ def _table(name: str, raw: Iterator[list[str]]) -> tuple[Table, TableFaults]:
         if not any(cell.strip() for cell in cells):
             continue
         if number > MOST_ROWS + 1:
-            faults.add(
-                f"{name}: more than {MOST_ROWS:,} rows; keep one row for each claim".replace(
-                    ",", " "
-                )
-            )
+            most = f"{MOST_ROWS:,}".replace(",", " ")
+            faults.add(f"more than {most} rows; keep one row for each claim")
             break
         rows.append(Row(number, _cells(number, cells, headings, faults)))
     return Table(name, headings, tuple(rows)), faults
@@ -165,7 +148,7 @@ def _headings(cells: Sequence[str], faults: TableFaults) -> tuple[str, ...]:
     if len(made) > MOST_COLUMNS:
         raise UserError(f"{faults.name}: more than {MOST_COLUMNS} columns; keep the claims alone")
     for heading in dict.fromkeys(h for h in made if h and made.count(h) > 1):
-        faults.add(f"{faults.name}: row 1: heading {echo(heading)} stands twice; keep one")
+        faults.add(f"row 1: heading {echo(heading)} stands twice; keep one")
     return tuple(made)
 
 
@@ -194,7 +177,7 @@ def _without_apostrophe(text: str) -> str:
     if not text.startswith("'"):
         return text
     held = text[1:].lstrip()
-    return text[1:] if held.startswith(_STARTS) or held[:1].isdigit() else text
+    return text[1:] if held.startswith(STARTS_A_FORMULA) or held[:1].isdigit() else text
 
 
 def write_table(headings: Sequence[str], rows: Sequence[Sequence[str]], ending: str) -> bytes:
@@ -202,23 +185,9 @@ def write_table(headings: Sequence[str], rows: Sequence[Sequence[str]], ending: 
 
     The cells of a workbook keep what is typed in them as text: 0.50 stays 0.50.
     """
-    safe = [[_safe(cell) for cell in row] for row in rows]
+    safe = [[safe_cell(cell) for cell in row] for row in rows]
     if ending.lower() == XLSX:
         return workbook_bytes(headings, safe)
     if ending.lower() != CSV:
         raise UserError(f"{ending!r} is no ending of a table; write a name in .csv or .xlsx")
-    stream = io.StringIO(newline="")
-    writer = csv.writer(stream, lineterminator="\r\n")
-    writer.writerows([[_safe(heading) for heading in headings], *safe])
-    return codecs.BOM_UTF8 + stream.getvalue().encode()
-
-
-def _safe(text: str) -> str:
-    """Return a cell that a spreadsheet reads as a number or as text, never as a formula.
-
-    >>> _safe("=1+1"), _safe("-12.5"), _safe("-x")
-    ("'=1+1", '-12.5', "'-x")
-    """
-    if _NUMBER.fullmatch(text):
-        return text
-    return f"'{text}" if text.lstrip(" ").startswith(_STARTS) else text
+    return csv_bytes([map(safe_cell, headings), *safe])

@@ -13,7 +13,7 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Literal
 
-from lineproof.errors import FaultList, UserError
+from lineproof.errors import FileFaults, UserError
 from lineproof.quantity import echo, internal_factor, unit_named
 from lineproof.resources import csv_text
 
@@ -24,7 +24,6 @@ MOST_BYTES = 20_000_000
 MOST_LINES = 200_000
 LONGEST_LINE = 1_000
 LONGEST_NAME = 80
-MOST_FAULTS = 40
 _NUMBER = re.compile(r"[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d{1,3})?", re.ASCII)
 _COUNT = re.compile(r"\d{1,4}", re.ASCII)
 _HEADER = re.compile(r"\s*(\w+)\s*(?:[(\[]([^()\[\]]{1,20})[)\]])?\s*", re.ASCII)
@@ -51,31 +50,12 @@ class Line:
     cells: tuple[Cell, ...]
 
 
-class ManyFaults(FaultList):
-    """Faults of one file; after the first forty only their number is told."""
-
-    def __init__(self, name: str) -> None:
-        super().__init__()
-        self.name = name
-
-    def add(self, fault: str) -> None:
-        """Note one fault of the file."""
-        super().add(f"{self.name}: {fault}")
-
-    def raise_if_any(self) -> None:
-        """Raise the first faults and the number of the others."""
-        if len(self.faults) > MOST_FAULTS:
-            more = len(self.faults) - MOST_FAULTS
-            raise UserError([*self.faults[:MOST_FAULTS], f"{self.name}: and {more} faults more"])
-        super().raise_if_any()
-
-
 def read_table(source: Path | bytes, name: str, columns: Sequence[Column]) -> list[Line]:
     """Return the rows of a CSV file; a column left out that is not needed reads as zero.
 
     ``name`` stands for the file in messages. Raises :class:`UserError` with all faults.
     """
-    faults = ManyFaults(name)
+    faults = FileFaults(name)
     rows = _rows(_text(source, name), name)
     header = next(rows, None)
     if header is None:
@@ -138,7 +118,7 @@ class _Place:
     factor: float = 1.0
 
 
-def _places(header: Sequence[str], columns: Sequence[Column], faults: ManyFaults) -> list[_Place]:
+def _places(header: Sequence[str], columns: Sequence[Column], faults: FileFaults) -> list[_Place]:
     found: dict[str, tuple[int, str]] = {}
     known = {column.name.lower(): column for column in columns}
     for at, cell in enumerate(header):
@@ -162,7 +142,7 @@ def _places(header: Sequence[str], columns: Sequence[Column], faults: ManyFaults
     return places
 
 
-def _factor(column: Column, unit: str, faults: ManyFaults) -> float:
+def _factor(column: Column, unit: str, faults: FileFaults) -> float:
     if not column.unit:
         if unit:
             faults.add(f"heading {column.name!r} takes no unit, but has {echo(unit)}")
@@ -180,7 +160,7 @@ def _factor(column: Column, unit: str, faults: ManyFaults) -> float:
     return internal_factor(found.spelling)
 
 
-def _cell(cells: Sequence[str], place: _Place, number: int, faults: ManyFaults) -> Cell:
+def _cell(cells: Sequence[str], place: _Place, number: int, faults: FileFaults) -> Cell:
     """Return one cell; where it is wrong, note the fault and return something harmless."""
     column = place.column
     if place.at is None:
@@ -210,7 +190,7 @@ def _what_is_wrong(text: str) -> str:
     return "is not a number; write it like -12.5"
 
 
-def _name(cell: str, where: str, faults: ManyFaults) -> str:
+def _name(cell: str, where: str, faults: FileFaults) -> str:
     text = cell.strip()
     if cell.startswith(_FORMULA) or text.startswith(_FORMULA):
         faults.add(f"{where}: {echo(cell)} could run as a formula; begin the name with a letter")

@@ -25,9 +25,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from lineproof.beams.analysis.arrangements import LoadCase
-from lineproof.beams.analysis.csv_table import Column, Line, ManyFaults, read_table
+from lineproof.beams.analysis.csv_table import Column, Line, read_table
 from lineproof.beams.analysis.curves import Floats, Side
 from lineproof.beams.analysis.envelope import Envelope, Station
+from lineproof.errors import FileFaults
 
 Lines = NDArray[np.int64]
 """Line numbers of a file."""
@@ -97,7 +98,7 @@ def read_forces(
     ``lengths`` are the spans [mm]; ``breaks`` holds by span the stations at which the load is
     known to change [mm], each of which must be a station of the file.
     """
-    faults = ManyFaults(name)
+    faults = FileFaults(name)
     table = _table(read_table(source, name, FORCES), lengths, faults)
     faults.raise_if_any()
     known = breaks or {}
@@ -114,7 +115,7 @@ def read_forces(
     return _imported(table, lengths)
 
 
-def _table(lines: Sequence[Line], lengths: Sequence[float], faults: ManyFaults) -> Table:
+def _table(lines: Sequence[Line], lengths: Sequence[float], faults: FileFaults) -> Table:
     table: dict[LoadCase, dict[int, list[Ordinate]]] = defaultdict(lambda: defaultdict(list))
     for line in lines:
         span, x, case, combination, M, V, T = line.cells
@@ -143,7 +144,7 @@ def _check_stations(
     length: float,
     breaks: Sequence[float],
     where: str,
-    faults: ManyFaults,
+    faults: FileFaults,
 ) -> None:
     stations = [row.x for row in rows]
     if not stations:
@@ -175,7 +176,7 @@ def _largest(table: Table) -> dict[int, float]:
 
 
 def _check_statics(
-    rows: Sequence[Ordinate], tolerance: float, least: float, where: str, faults: ManyFaults
+    rows: Sequence[Ordinate], tolerance: float, least: float, where: str, faults: FileFaults
 ) -> None:
     moment = max((least, *(abs(row.M) for row in rows)))
     shear = max((abs(row.V) for row in rows), default=0.0)
@@ -222,7 +223,7 @@ def _drifts(
     return abs(last.M - first.M - gained) > slack
 
 
-def _check_alike(table: Table, lengths: Sequence[float], faults: ManyFaults) -> None:
+def _check_alike(table: Table, lengths: Sequence[float], faults: FileFaults) -> None:
     """Ask for the stations of the first case in every other."""
     first, *others = table
     for number in range(1, len(lengths) + 1):
@@ -276,7 +277,7 @@ def read_reactions(
     Each must be the jump of V over its support; a free end needs none. Raises
     :class:`UserError` with all faults.
     """
-    faults = ManyFaults(name)
+    faults = FileFaults(name)
     found = _by_support(read_table(source, name, REACTIONS), faults)
     jumps = dict(_jumps(forces.envelope))
     for case, support in found.keys() - jumps.keys():
@@ -297,7 +298,7 @@ def read_reactions(
     return {c: tuple(found[c, s] for s in supports) for c in forces.envelope.cases}
 
 
-def _by_support(lines: Sequence[Line], faults: ManyFaults) -> dict[tuple[LoadCase, int], float]:
+def _by_support(lines: Sequence[Line], faults: FileFaults) -> dict[tuple[LoadCase, int], float]:
     found: dict[tuple[LoadCase, int], float] = {}
     for line in lines:
         support, case, combination, R = line.cells
