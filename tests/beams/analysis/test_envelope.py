@@ -10,9 +10,7 @@ from hypothesis import assume, given
 from hypothesis import strategies as st
 
 from lineproof.beams.analysis.arrangements import (
-    Combination,
     LoadCase,
-    all_arrangements,
     cases_of,
     factored_combinations,
     standard_arrangements,
@@ -24,7 +22,6 @@ from lineproof.beams.analysis.envelope import (
     solve_cases,
     span_moment,
     stations_of,
-    unfactored_reactions,
 )
 from lineproof.beams.analysis.model import (
     FIXED,
@@ -148,20 +145,6 @@ def test_face_moments_are_less_than_at_the_axis() -> None:
     w = solved.solution.span(2).w[:, 0]
     expected = found.M[:, axis] + found.V[:, axis] * 200 - w * 200**2 / 2
     assert found.M[:, face] == pytest.approx(expected, rel=1e-12)
-
-
-def test_reactions_by_load_type_and_their_worst_portions() -> None:
-    """Against all 2^3 portions; dead loads add up to what stands on the beam."""
-    solution = solve(THREE, LOADS)
-    found = unfactored_reactions(solution)
-    assert [(r.support, r.kind) for r in found] == [(s, k) for k in "DL" for s in (1, 2, 3, 4)]
-    dead = sum(r.everywhere for r in found if r.kind == "D")
-    assert dead == pytest.approx(30 * (7600 + 9200 + 7600) + 50e3, rel=1e-12)
-    one = (Combination("1L", "", (("L", 1.0),)),)
-    every = solution.combined(cases_of(solution.rows, one, all_arrangements(3)).factors).reactions
-    live = [r for r in found if r.kind == "L"]
-    assert [r.largest for r in live] == pytest.approx(every.max(axis=0).tolist(), rel=1e-12)
-    assert [r.smallest for r in live] == pytest.approx(every.min(axis=0).tolist(), rel=1e-12)
 
 
 # -- redistribution -------------------------------------------------------------------------------

@@ -138,14 +138,6 @@ class Curves:
         stations = np.hstack([np.broadcast_to(self.breaks, self.P.shape), at + t])
         return _extremes(values, stations)
 
-    def shear_extremes(self) -> Extremes:
-        """Return largest and smallest V of every case, exactly: beside a break."""
-        inner = [self.shear(self.breaks[1:], "left"), self.shear(self.breaks[:-1], "right")]
-        stations = np.broadcast_to(
-            np.hstack([self.breaks[1:], self.breaks[:-1]]), (len(self.M0), 2 * self.w.shape[1])
-        )
-        return _extremes(np.hstack(inner), stations)
-
     def _piece_starts(self) -> tuple[Floats, Floats, Floats]:
         at = self.breaks[:-1]
         return at, self.shear(at), self.moment(at)

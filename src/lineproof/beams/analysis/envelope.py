@@ -13,7 +13,6 @@ from typing import Literal
 import numpy as np
 
 from lineproof.beams.analysis.arrangements import (
-    LIVE,
     Arrangement,
     Cases,
     Combination,
@@ -205,39 +204,3 @@ def span_moment(solved: CaseSolution, number: int, *, largest: bool = True) -> G
     x = float(stations[row])
     V = float(curves.shear(np.array([x]))[row, 0])
     return Governing(float(values[row]), number, x, solved.cases[row], V)
-
-
-@dataclass(frozen=True, slots=True)
-class Reaction:
-    """Unfactored reaction of one load type at one support [N], and the couple [N.mm].
-
-    ``everywhere`` has the load on all spans; ``largest`` and ``smallest`` have live load on those
-    spans only that raise or lower the reaction, the worst of all arrangements, and are the same as
-    ``everywhere`` for other loads. The couple belongs to ``everywhere``.
-    """
-
-    support: int
-    kind: str
-    everywhere: float
-    largest: float
-    smallest: float
-    couple: float
-
-
-def unfactored_reactions(solution: Solution) -> tuple[Reaction, ...]:
-    """Return the reactions of every support by load type, for whoever designs what carries it."""
-    made = []
-    for kind in dict.fromkeys(kind for kind, _ in solution.rows):
-        own = [i for i, (k, _) in enumerate(solution.rows) if k == kind]
-        R = solution.reactions[own]
-        total, couples = R.sum(axis=0), solution.couples[own].sum(axis=0)
-        live = kind in LIVE
-        high = np.maximum(R, 0.0).sum(axis=0) if live else total
-        low = np.minimum(R, 0.0).sum(axis=0) if live else total
-        numbers = zip(total.tolist(), high.tolist(), low.tolist(), couples.tolist(), strict=True)
-        made += [
-            Reaction(number, kind, *values)
-            for number, values in enumerate(numbers, start=1)
-            if solution.beam.supports[number - 1].kind != "free"
-        ]
-    return tuple(made)

@@ -112,26 +112,15 @@ class PartialLoad:
 
 @dataclass(frozen=True, slots=True)
 class PointLoad:
-    """A point load P [N] at a distance ``at`` [mm] from the left end of the span.
-
-    ``source`` names the member it comes from, if it is a reaction.
-    """
+    """A point load P [N] at a distance ``at`` [mm] from the left end of the span."""
 
     kind: str
     span: int
     P: float
     at: float
-    source: str = ""
 
 
 Load = UniformLoad | PartialLoad | PointLoad
-
-
-def incoming(
-    reactions: Mapping[str, float], span: int, at: float, source: str
-) -> tuple[PointLoad, ...]:
-    """Return the unfactored reactions of an incoming beam, by load type [N], as point loads."""
-    return tuple(PointLoad(kind, span, P, at, source) for kind, P in reactions.items())
 
 
 @dataclass(frozen=True)

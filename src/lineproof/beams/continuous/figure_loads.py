@@ -162,8 +162,7 @@ def _stretches(axes: Sequence[float], loads: Sequence[Load]) -> list[Stretch]:
                 text = f"{fixed(load.w, 1)} kN/m, {where}"
                 found.append(Stretch(start + load.start, start + load.end, text, load.w < 0.0))
             case PointLoad():
-                source = f" ({load.source})" if load.source else ""
-                text = f"{fixed(load.P / 1e3, 1)} kN at {load.at / 1e3:.2f}{source}"
+                text = f"{fixed(load.P / 1e3, 1)} kN at {load.at / 1e3:.2f}"
                 found.append(Stretch(start + load.at, start + load.at, text, load.P < 0.0))
     return found
 
