@@ -78,7 +78,7 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
     if b"startxref" not in content[-_TAIL:]:  # else the reader searches it all, line by line
         raise UserError("this PDF is damaged, its end is missing; give the whole file")
     try:
-        with _silent("pypdf"):
+        with _silent():
             reader = pypdf.PdfReader(io.BytesIO(content))
             order = _printed_order(reader)
             found = [(name, part) for name, parts in reader.attachments.items() for part in parts]
@@ -91,9 +91,9 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
 
 
 @contextmanager
-def _silent(name: str) -> Iterator[None]:
-    """Keep a library from writing its warnings between our own sentences."""
-    logger = logging.getLogger(name)
+def _silent() -> Iterator[None]:
+    """Keep pypdf from writing its warnings between our own sentences."""
+    logger = logging.getLogger("pypdf")
     level = logger.level
     logger.setLevel(logging.CRITICAL + 1)
     try:

@@ -49,7 +49,7 @@ class Face:
         )
 
 
-def face_of(font: Any, *, outlines: bool = True) -> Face:
+def face_of(font: Any) -> Face:
     """Read a font of a page; ``font`` is the dictionary of a PDF reader."""
     wide = font.get("/Subtype") == "/Type0"
     unicode_map = font.get("/ToUnicode")
@@ -57,7 +57,7 @@ def face_of(font: Any, *, outlines: bool = True) -> Face:
     if not texts and not wide:
         texts = {code: bytes([code]).decode("cp1252", "replace") for code in range(256)}
     name = _PREFIX.sub("", str(font.get("/BaseFont", ""))).lstrip("/")
-    return Face(name, texts, _outlines(font) if wide and outlines else {}, wide)
+    return Face(name, texts, _outlines(font) if wide else {}, wide)
 
 
 def texts_by_code(cmap: bytes) -> dict[int, str]:

@@ -91,7 +91,6 @@ def read_forces(
     *,
     breaks: Mapping[int, Sequence[float]] | None = None,
     name: str = "forces",
-    tolerance: float = TOLERANCE,
 ) -> Imported:
     """Return the forces of a CSV file, checked; raises :class:`UserError` with all faults.
 
@@ -109,7 +108,7 @@ def read_forces(
             rows = spans.get(number, ())
             _check_stations(rows, length, known.get(number, ()), where, faults)
             least = SMALL_CASE * largest.get(number, 0.0)
-            _check_statics(rows, tolerance, least, where, faults)
+            _check_statics(rows, least, where, faults)
     _check_alike(table, lengths, faults)
     faults.raise_if_any()
     return _imported(table, lengths)
@@ -175,9 +174,7 @@ def _largest(table: Table) -> dict[int, float]:
     return made
 
 
-def _check_statics(
-    rows: Sequence[Ordinate], tolerance: float, least: float, where: str, faults: FileFaults
-) -> None:
+def _check_statics(rows: Sequence[Ordinate], least: float, where: str, faults: FileFaults) -> None:
     moment = max((least, *(abs(row.M) for row in rows)))
     shear = max((abs(row.V) for row in rows), default=0.0)
     total, found = 0.0, len(faults.faults)
@@ -186,13 +183,13 @@ def _check_statics(
         distance = b.x - a.x
         gained = (a.V + b.V) / 2 * distance
         total += gained
-        if not drift and _drifts(rows[0], b, total, tolerance, (moment, shear)):
+        if not drift and _drifts(rows[0], b, total, (moment, shear)):
             drift = (
                 f"{where}, 0 to {b.x / 1000:g} m: M changes by {(b.M - rows[0].M) / 1e6:g} kN.m, "
                 f"but V gives {total / 1e6:g} kN.m over that length (lines {rows[0].line} to "
                 f"{b.line}); look at signs and units, and write more decimals"
             )
-        slack = tolerance * max(moment, shear * distance)
+        slack = TOLERANCE * max(moment, shear * distance)
         if abs(b.M - a.M - gained) <= slack:
             continue
         if distance == 0:
@@ -214,12 +211,11 @@ def _drifts(
     first: Ordinate,
     last: Ordinate,
     gained: float,
-    tolerance: float,
     largest: tuple[float, float],
 ) -> bool:
     """Tell whether gaps that may each pass have added up; ``largest`` M and V of the span."""
     moment, shear = largest
-    slack = tolerance * max(moment, shear * (last.x - first.x))
+    slack = TOLERANCE * max(moment, shear * (last.x - first.x))
     return abs(last.M - first.M - gained) > slack
 
 
@@ -270,7 +266,6 @@ def read_reactions(
     forces: Imported,
     *,
     name: str = "reactions",
-    tolerance: float = TOLERANCE,
 ) -> Mapping[LoadCase, tuple[float, ...]]:
     """Return reactions [N] by load case, one a support, in the order of the supports.
 
@@ -286,7 +281,7 @@ def read_reactions(
     for (case, _), jump in jumps.items():
         largest[case] = max(largest[case], abs(jump))
     for (case, support), jump in jumps.items():
-        slack = tolerance * largest[case]
+        slack = TOLERANCE * largest[case]
         R = found.setdefault((case, support), 0.0 if abs(jump) <= slack else math.nan)
         if math.isnan(R):
             faults.add(f"{case}, support {support}: no reaction")

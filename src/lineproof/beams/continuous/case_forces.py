@@ -12,7 +12,7 @@ from dataclasses import dataclass
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.forces import Demand, End, other
 from lineproof.beams.continuous.groups import Group, groups_of, moment_name, named
-from lineproof.beams.continuous.imported_case import record_imported
+from lineproof.beams.continuous.imported_case import record_imported, signed
 from lineproof.beams.continuous.model import ANALYSIS, GIVEN, Model, SingleLoad
 from lineproof.beams.continuous.symbols import code, stated
 from lineproof.beams.steps import Steps
@@ -234,9 +234,9 @@ class _Lines:
         V = self.demand.V if self.case.near == "left" else -self.demand.V
         top = self.demand.M < 0
         kind = "Negative" if top else "Positive"
-        text = _signed(moment, negative=top)
+        text = signed(moment, negative=top)
         self._line(f"M_f = {text}", f"{kind} moment at the section: {self.title}")
-        self._line(f"V_f = {_signed(shear, negative=V < 0)}", f"Shear at the section: {self.title}")
+        self._line(f"V_f = {signed(shear, negative=V < 0)}", f"Shear at the section: {self.title}")
 
     def _section_terms(self, x: float) -> tuple[str, str]:
         moment = ["M_sn + V_sn*x_f" if self.moments["M_sn"] else "V_sn*x_f"]
@@ -258,7 +258,3 @@ class _Lines:
                 moment.append(f"- {factor}*w_x{n}*({e} - {s})*(x_f - ({s} + {e})/2)")
                 shear.append(f"- {factor}*w_x{n}*({e} - {s})")
         return " ".join(moment), " ".join(shear)
-
-
-def _signed(text: str, *, negative: bool) -> str:
-    return f"-({text})" if negative else text

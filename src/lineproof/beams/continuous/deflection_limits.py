@@ -108,7 +108,7 @@ def _record_curvature(steps: Steps, ends: Sequence[str], local: Sequence[LocalLo
     if len(ends) == 1:
         (end,) = ends
         steps.bind(I_cre=steps.entry(f"I_cr{end}"), M_h=steps.entry(f"M_h{end}"))
-    points = points_at(local, float(steps.entry("l").value), halved=True)
+    points = points_at(local, float(steps.entry("l").value))
     settings: dict[str, Any] = curvature.settings_of(points)
     steps.found(
         "delta_k", procedure, closing, unit="mm", clause="9.8.2", settings=settings,

@@ -152,14 +152,14 @@ def _sum(
     )  # fmt: skip
 
 
-def points_at(loads: Sequence[LocalLoad], l: float, *, halved: bool) -> tuple[Point, ...]:
-    """Return the loads of the stage of all load as point loads, for curvatures."""
+def points_at(loads: Sequence[LocalLoad], l: float) -> tuple[Point, ...]:
+    """Return the loads of the stage of all load as point loads, for curvatures of a span."""
     made: list[Point] = []
     for load in loads:
         if not load.partial:
             made.append(Point(load.bound["P_s"].value, load.bound["x_P"].value))
             continue
         w, start, end = (float(load.bound[name].value) for name in ("w_p", "x_1", "x_2"))
-        for x_1, x_2 in pieces(start, end, l, halved=halved):
+        for x_1, x_2 in pieces(start, end, l, halved=True):
             made += two_points(w, x_1, x_2)
     return tuple(made)

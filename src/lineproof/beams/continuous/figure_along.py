@@ -87,13 +87,13 @@ Piece = TypeVar("Piece")
 MOST_SPANS = 6
 
 
-def in_figures(pieces: Sequence[Piece], most: int = MOST_SPANS) -> tuple[tuple[Piece, ...], ...]:
-    """Divide the pieces of a long beam evenly, one figure each, of at most ``most`` spans.
+def in_figures(pieces: Sequence[Piece]) -> tuple[tuple[Piece, ...], ...]:
+    """Divide the pieces of a long beam evenly, at most six to a figure, one a span.
 
     >>> in_figures([1, 2, 3, 4, 5, 6, 7])
     ((1, 2, 3, 4), (5, 6, 7))
     """
-    rows = -(-len(pieces) // most)
+    rows = -(-len(pieces) // MOST_SPANS)
     least, more = divmod(len(pieces), max(rows, 1))
     found: list[tuple[Piece, ...]] = []
     first = 0

@@ -126,11 +126,11 @@ class _Lines:
         top = demand.M < 0
         kind = "Negative" if top else "Positive"
         self._line(
-            f"M_f = {_signed(moment, negative=top)}",
+            f"M_f = {signed(moment, negative=top)}",
             f"{kind} moment at the section: {demand.case}",
         )
         self._line(
-            f"V_f = {_signed(shear, negative=demand.V < 0)}", f"Shear at the section: {demand.case}"
+            f"V_f = {signed(shear, negative=demand.V < 0)}", f"Shear at the section: {demand.case}"
         )
 
 
@@ -191,5 +191,6 @@ def case_words(case: LoadCase) -> str:
     return f"combination {case.combination}, case {case.arrangement}"
 
 
-def _signed(text: str, *, negative: bool) -> str:
+def signed(text: str, *, negative: bool) -> str:
+    """Return a sum of terms, its sign turned where it is negative."""
     return f"-({text})" if negative else text
