@@ -129,17 +129,21 @@ class Worked:
     failed: Mapping[str, str]
 
 
+def real(value: object) -> float:
+    """Return a value if it is a finite real number, else raise :class:`ValueError`."""
+    if not isinstance(value, float) or not math.isfinite(value):
+        msg = "no finite real number"
+        raise ValueError(msg)
+    return value
+
+
 def evaluated(tree: Tree, named: Mapping[str, Number]) -> Number:
     """Return the value of a tree; raises for anything but a finite real number.
 
     >>> evaluated(parse_line("a = 2*b")[1], {"b": 3.0})
     6.0
     """
-    result = weave_tree(tree)(named)
-    if not isinstance(result, float) or not math.isfinite(result):
-        msg = "no finite real number"
-        raise ValueError(msg)
-    return result
+    return real(weave_tree(tree)(named))
 
 
 class Graph:

@@ -72,10 +72,11 @@ def _cot(angle: float) -> float:
 
 
 # fabs, since abs of a complex number would hide the root of a negative one.
-_FUNCTIONS: dict[str, Callable[..., Any]] = {
+FUNCTIONS: dict[str, Callable[..., Any]] = {
     "sqrt": math.sqrt, "cbrt": _cbrt, "abs": math.fabs, "min": min, "max": max,
     "sin": _sin, "cos": _cos, "tan": _tan, "cot": _cot,
 }  # fmt: skip
+"""What the functions of the grammar do with floats; angles are in degrees."""
 
 
 def called(function: str) -> str:
@@ -87,7 +88,7 @@ def called(function: str) -> str:
     return f"_{function}"
 
 
-_SCOPE: dict[str, Any] = {called(name): f for name, f in _FUNCTIONS.items()} | {
+_SCOPE: dict[str, Any] = {called(name): f for name, f in FUNCTIONS.items()} | {
     "_inf": math.inf,
     "_nan": math.nan,
     "__builtins__": {},
@@ -124,7 +125,7 @@ class _Writer:
                 first = self.text(left, _ATOM if op == "**" else strength)
                 return f"{first}{op}{self.text(right, _ATOM)}", strength
             case Call(function, args):
-                callee = called(function) if function in _FUNCTIONS else "_unknown"
+                callee = called(function) if function in FUNCTIONS else "_unknown"
                 return f"{callee}({', '.join(self.text(a) for a in args)})", _ATOM
 
 
@@ -199,7 +200,7 @@ def _weave(tree: Tree) -> Woven:
         case Binary(op, left, right):
             return _WEAVERS[op](_weave(left), _weave(right))
         case Call(function, args):
-            called = _FUNCTIONS[function]
+            called = FUNCTIONS[function]
             woven = [_weave(a) for a in args]
             return lambda values: called(*[one(values) for one in woven])
 

@@ -14,7 +14,7 @@ from dataclasses import dataclass, field
 
 import lineproof.beams  # noqa: F401 - registers the procedures of found values
 from lineproof.audit.data import Interval
-from lineproof.audit.graph import Graph, Node
+from lineproof.audit.graph import Graph, Node, real
 from lineproof.errors import UserError
 from lineproof.formula import names_of
 from lineproof.formula.compiled import COMPARE, NOT_COMPUTED, compile_tree
@@ -73,7 +73,7 @@ def combined(function: Function, forms: Sequence[Form]) -> Form:
     Interval(low=0.0, high=0.0)
     """
     middles = [form.middle for form in forms]
-    middle = _finite(function(*middles))
+    middle = real(function(*middles))
     moved = [(at, form) for at, form in enumerate(forms) if not form.is_point]
     if not moved:
         return Form(middle)
@@ -100,13 +100,6 @@ def _trimmed(parts: dict[str, float], middle: float) -> dict[str, float]:
     return {source: part for source, part in parts.items() if abs(part) > least}
 
 
-def _finite(value: float) -> float:
-    if not isinstance(value, float) or not math.isfinite(value):
-        msg = "no finite real number"
-        raise ValueError(msg)
-    return value
-
-
 def _at(
     function: Function, middles: Sequence[float], at: int, value: float, otherwise: float
 ) -> float:
@@ -121,7 +114,7 @@ def _tried(function: Function, values: Sequence[float], otherwise: float) -> flo
     The end of an interval may lie outside of what a formula takes although the middle does not.
     """
     try:
-        return _finite(function(*values))
+        return real(function(*values))
     except NOT_COMPUTED:
         return otherwise
 

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from lineproof.audit.graph import real
 from lineproof.audit.slips.edits import TOP, Edit, Line
-from lineproof.audit.slips.tree import real
 from lineproof.audit.slips.values import others_for
 from lineproof.formula.compiled import NOT_COMPUTED
 

@@ -5,10 +5,10 @@ from __future__ import annotations
 from collections.abc import Callable, Container, Sequence
 from dataclasses import dataclass, field
 
-from lineproof.audit.graph import Node
+from lineproof.audit.graph import Node, real
 from lineproof.audit.slips.edits import Line
 from lineproof.audit.slips.scope import Pairs, Scope
-from lineproof.audit.slips.tree import Places, real
+from lineproof.audit.slips.tree import Places
 from lineproof.errors import UserError
 from lineproof.formula.compiled import NOT_COMPUTED
 

@@ -13,32 +13,19 @@ from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from lineproof.audit.graph import real
+from lineproof.formula.compiled import FUNCTIONS
 from lineproof.formula.tree import Binary, Call, Name, Negative, Number, Tree
 
 Pair = tuple[float, float]
 """A value and half the width of what it stands for."""
 
 
-def _cbrt(value: float) -> float:
-    if value < 0:
-        msg = "root of a negative number"
-        raise ValueError(msg)
-    return math.cbrt(value)
-
-
-def _cot(angle: float) -> float:
-    return 1.0 / math.tan(math.radians(angle))
-
-
 OPERATIONS: Mapping[str, Callable[..., Any]] = {
     "+": operator.add, "-": operator.sub, "*": operator.mul, "/": operator.truediv,
-    "**": operator.pow, "negative": operator.neg, "sqrt": math.sqrt, "cbrt": _cbrt,
-    "abs": math.fabs, "min": min, "max": max,
-    "sin": lambda angle: math.sin(math.radians(angle)),
-    "cos": lambda angle: math.cos(math.radians(angle)),
-    "tan": lambda angle: math.tan(math.radians(angle)), "cot": _cot,
+    "**": operator.pow, "negative": operator.neg, **FUNCTIONS,
 }  # fmt: skip
-"""What the operations of a tree do with floats; angles are in degrees."""
+"""What the operations of a tree do with floats."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -201,14 +188,6 @@ class Places:
                 values[at], halves[at] = self._at(at, values, halves, self.named)
                 touched.add(at)
         return real(values[0]), halves[0]
-
-
-def real(value: Any) -> float:
-    """Return a value if it is a finite real number, else raise :class:`ValueError`."""
-    if not isinstance(value, float) or not math.isfinite(value):
-        msg = "no finite real number"
-        raise ValueError(msg)
-    return value
 
 
 def text_of(tree: Tree) -> str:
