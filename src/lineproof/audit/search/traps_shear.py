@@ -102,17 +102,14 @@ def _capped(view: View, node: Node, f_c: float) -> dict[str, float]:
 
 def _angles(view: View) -> Iterator[Caught]:
     for node in view.graph:
-        for tree in trees(node):
-            for each in walk(tree):
-                if isinstance(each, Call) and each.function in _TRIGONOMETRY:
-                    inside = {float(text) for arg in each.args for text in numbers_of(arg)}
-                    if inside & _TURNS:
-                        yield Caught(
-                            node,
-                            "an angle in degrees is turned into radians once more",
-                            "The functions take degrees, as a calculator set to them.",
-                            clause="11.3.6",
-                        )
+        for each in (each for tree in trees(node) for each in walk(tree)):
+            if isinstance(each, Call) and _turned(each):
+                yield Caught(
+                    node,
+                    "an angle in degrees is turned into radians once more",
+                    "The functions take degrees, as a calculator set to them.",
+                    clause="11.3.6",
+                )
     for node in view.values("eps_x"):
         if abs(view.graph.stored[node.id]) > _LARGEST_STRAIN:
             yield Caught(
@@ -129,6 +126,12 @@ def _angles(view: View) -> Iterator[Caught]:
                 "Units are carried by the program: leave the factor out.",
                 clause="11.3.6.4",
             )
+
+
+def _turned(call: Call) -> bool:
+    """Tell whether a function of an angle gets one that is turned between degrees and radians."""
+    inside = {float(text) for arg in call.args for text in numbers_of(arg)}
+    return call.function in _TRIGONOMETRY and bool(inside & _TURNS)
 
 
 def _simplified(view: View) -> Iterator[Caught]:

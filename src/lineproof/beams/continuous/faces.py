@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from lineproof.beams.continuous.forces import End, other
+from lineproof.beams.continuous.forces import ENDS, End, other
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.continuous.restraint import held_in_frame, restraint_moment
 
@@ -47,7 +47,7 @@ def faces_of(model: Model) -> list[Face]:
     return [
         Face(support, side)
         for support in range(1, model.spans + 2)
-        for side in ("left", "right")
+        for side in ENDS
         if model.forces.has_span(support, side)
     ]
 

@@ -30,6 +30,7 @@ from lineproof.beams.analysis.solve import Row, Solution, solve
 
 End = Literal["left", "right"]
 """An end of a span: the one at its left or at its right support."""
+ENDS: tuple[End, End] = ("left", "right")
 
 
 @dataclass(frozen=True, slots=True)

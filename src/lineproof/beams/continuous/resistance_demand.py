@@ -17,7 +17,7 @@ from numpy.typing import NDArray
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.detailing_data import THETA, Designed, ShearStretch
-from lineproof.beams.continuous.forces import Demand, End
+from lineproof.beams.continuous.forces import ENDS, Demand, End
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.resistance import area_for, section_depth, shear_depth, yield_force
 from lineproof.standards.a23_3 import shear_bars, torsion
@@ -27,7 +27,6 @@ Truths = NDArray[np.bool_]
 NO_SHEAR = ShearStretch(0.0, 0.0, 0.0, 0.0, THETA)
 NOTHING = 1e3
 """A moment [N.mm] or force [N, times 1 mm] that is none: round-off of the analysis."""
-ENDS: tuple[End, End] = ("left", "right")
 TIP = 50.0
 """Length of bars at a free end, inside the cover, in which nothing is asked of them [mm]."""
 

@@ -20,7 +20,7 @@ from lineproof.beams.continuous.cutoff_sets import (
 )
 from lineproof.beams.continuous.cutoff_support import Hooks, hook_key, record_section
 from lineproof.beams.continuous.detailing_data import Designed
-from lineproof.beams.continuous.forces import Demand, End
+from lineproof.beams.continuous.forces import ENDS, Demand, End
 from lineproof.beams.continuous.resistance import Standing, top_layers
 from lineproof.beams.continuous.resistance_cover import ROUND_OFF, Gap, Station
 from lineproof.beams.continuous.resistance_demand import demand_at, largest_at, stretch_at
@@ -138,7 +138,7 @@ def _demand(writers: Writers, station: Station, *, tension: bool) -> Demand:
     row = int((side.F_row if tension else side.M_row)[0])
     start, end = forces.beam.faces(station.span)
     x = min(max(station.local, start), end)
-    both = [forces.demand(station.span, x, s, row) for s in ("left", "right")]
+    both = [forces.demand(station.span, x, s, row) for s in ENDS]
     return max(both, key=lambda d: abs(d.V))
 
 

@@ -9,7 +9,8 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from lineproof.beams.analysis.arrangements import LIVE
-from lineproof.beams.continuous.groups import groups_of, moment_name
+from lineproof.beams.continuous.forces import ENDS
+from lineproof.beams.continuous.groups import Group, groups_of, moment_name
 from lineproof.beams.continuous.model import ANALYSIS, Model, near_support
 from lineproof.beams.continuous.reactions import record_reactions
 from lineproof.beams.continuous.support_moments import SupportMoments
@@ -68,48 +69,37 @@ def _symbols(model: Model) -> Iterator[Symbol]:
     for group in groups_of(model):
         words = f"live load on span {group.span}" if group.span else KINDS[group.kind]
         for span in range(1, model.spans + 1):
-            for end in ("left", "right"):
-                name = moment_name(model, group, span, end)
-                support = near_support(span, end)
-                if name:
-                    side = {"l": "ℓ", "r": "r"}.get(name[2 + len(str(support))], "")
-                    of = {"ℓ": ", on its left", "r": ", on its right"}.get(side, "")
-                    yield numbered(
-                        name,
-                        "M",
-                        f"{support}{side},{group.subscript}",
-                        f"moment at support {support}{of}, {words}",
-                    )
-            for letter, end in (("a", "left"), ("b", "right")):
-                yield numbered(
-                    f"F_{span}{letter}{group.code}",
-                    "F",
-                    f"{span}{letter},{group.subscript}",
-                    f"slope at the {end} end of span {span}, simply supported, times EI, {words}",
-                )
+            yield from _symbols_of_span(model, group, span, words)
         for support in range(1, model.spans + 2):
-            sub = f"{support},{subscript(group.kind)}"
-            yield numbered(
-                f"R_{support}{code(group.kind)}",
-                "R",
-                sub,
-                f"reaction of support {support}, {KINDS[group.kind]}, unfactored",
-            )
-            if group.kind in LIVE:
-                yield numbered(
-                    f"R_m{support}{code(group.kind)}",
-                    "R",
-                    f"m,{sub}",
-                    f"smallest reaction of support {support}, {KINDS[group.kind]}",
-                )
-            if group.span:
-                yield numbered(
-                    f"R_{support}{group.code}",
-                    "R",
-                    f"{support},{group.subscript}",
-                    f"reaction of support {support}, {words}, unfactored",
-                )
+            yield from _symbols_of_reaction(group, support, words)
     yield from symbols_of_moments(model, groups_of(model))
     for support in range(1, model.spans + 2):
         what = f"least factored reaction of support {support}"
         yield numbered(f"R_u{support}", "R", f"u,{support}", what)
+
+
+def _symbols_of_span(model: Model, group: Group, span: int, words: str) -> Iterator[Symbol]:
+    """Give the moments at the ends of a span, and the slopes there if it is simply supported."""
+    for end in ENDS:
+        name, support = moment_name(model, group, span, end), near_support(span, end)
+        if name:
+            side = {"l": "ℓ", "r": "r"}.get(name[2 + len(str(support))], "")
+            of = {"ℓ": ", on its left", "r": ", on its right"}.get(side, "")
+            meaning = f"moment at support {support}{of}, {words}"
+            yield numbered(name, "M", f"{support}{side},{group.subscript}", meaning)
+    for letter, end in zip("ab", ENDS, strict=True):
+        meaning = f"slope at the {end} end of span {span}, simply supported, times EI, {words}"
+        sub = f"{span}{letter},{group.subscript}"
+        yield numbered(f"F_{span}{letter}{group.code}", "F", sub, meaning)
+
+
+def _symbols_of_reaction(group: Group, support: int, words: str) -> Iterator[Symbol]:
+    sub, of_kind = f"{support},{subscript(group.kind)}", code(group.kind)
+    meaning = f"reaction of support {support}, {KINDS[group.kind]}, unfactored"
+    yield numbered(f"R_{support}{of_kind}", "R", sub, meaning)
+    if group.kind in LIVE:
+        meaning = f"smallest reaction of support {support}, {KINDS[group.kind]}"
+        yield numbered(f"R_m{support}{of_kind}", "R", f"m,{sub}", meaning)
+    if group.span:
+        meaning = f"reaction of support {support}, {words}, unfactored"
+        yield numbered(f"R_{support}{group.code}", "R", f"{support},{group.subscript}", meaning)
