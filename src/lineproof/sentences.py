@@ -1,4 +1,4 @@
-"""Words put together to sentences: the capital at their beginning, which no symbol gets."""
+"""Words put together to sentences: the capital at their beginning, and how many of a thing."""
 
 from __future__ import annotations
 
@@ -25,3 +25,12 @@ def begun(text: str) -> str:
     """
     is_word = _WORD.match(text) is not None and _SYMBOLS.match(text) is None
     return f"{text[:1].upper()}{text[1:]}" if is_word or _ARTICLE.match(text) else text
+
+
+def counted(number: int, one: str, many: str = "") -> str:
+    """Return a number with the word for one or for many, by default with an s.
+
+    >>> counted(1, "line"), counted(0, "line"), counted(3, "line carries", "lines carry")
+    ('1 line', '0 lines', '3 lines carry')
+    """
+    return f"{number} {one if number == 1 else many or one + 's'}"

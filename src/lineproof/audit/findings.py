@@ -9,7 +9,7 @@ from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdi
 from lineproof.audit.effects import effects_of, named_line, turned_sentence
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.search import none_fits
-from lineproof.sentences import begun
+from lineproof.sentences import begun, counted
 from lineproof.typeset.values import told
 
 SOURCE = "claims"
@@ -86,14 +86,10 @@ def _finding(
     )  # fmt: skip
 
 
-def _count(number: int, one: str, many: str) -> str:
-    return f"{number} {one if number == 1 else many}"
-
-
 def _resting(judged: Judged, number: int) -> str:
     if judged.verdict is Verdict.DOUBTFUL:
-        return _count(number, "claimed line rests on", "claimed lines rest on")
-    return _count(number, "claimed line carries", "claimed lines carry")
+        return counted(number, "claimed line rests on", "claimed lines rest on")
+    return counted(number, "claimed line carries", "claimed lines carry")
 
 
 def _severity(judged: Judged, effects: Sequence[Effect]) -> Severity:

@@ -11,7 +11,7 @@ from lineproof.audit.findings import as_typed, cited, shown
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.shared import shared_slips
 from lineproof.quantity.units import internal_factor
-from lineproof.sentences import begun
+from lineproof.sentences import begun, counted
 from lineproof.typeset import printable
 
 MOST_EFFECTS = 5
@@ -44,7 +44,7 @@ def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
         yield _counts(audit)
     yield from (f"note: {note}" for note in audit.notes)
     findings = audit.findings
-    yield _many(len(findings), "finding", "findings") if findings else "no findings"
+    yield counted(len(findings), "finding") if findings else "no findings"
     yield from shared_slips(audit)
     number = 0
     for severity in Severity:
@@ -61,13 +61,9 @@ def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
 def _counts(audit: Audit) -> str:
     counts = Counter(judged.verdict for judged in audit.judged)
     claimed = sum(judged.claim is not None for judged in audit.judged)
-    told = [_many(counts[v], one, many) for v, one, many in _COUNTED if counts[v]]
-    left = _many(counts[Verdict.NOT_CLAIMED], "line", "lines")
-    return f"{_many(claimed, 'claim', 'claims')}: {', '.join(told)}; {left} not claimed"
-
-
-def _many(number: int, one: str, many: str) -> str:
-    return f"{number} {one if number == 1 else many}"
+    told = [counted(counts[v], one, many) for v, one, many in _COUNTED if counts[v]]
+    left = counted(counts[Verdict.NOT_CLAIMED], "line")
+    return f"{counted(claimed, 'claim')}: {', '.join(told)}; {left} not claimed"
 
 
 def _finding(number: int, finding: Finding) -> Iterator[str]:
@@ -80,7 +76,7 @@ def _finding(number: int, finding: Finding) -> Iterator[str]:
     for effect in finding.effects[:MOST_EFFECTS]:
         yield f"      - {effect.sentence}"
     if len(finding.effects) > MOST_EFFECTS:
-        yield f"      - and {_many(len(finding.effects) - MOST_EFFECTS, 'check', 'checks')} more"
+        yield f"      - and {counted(len(finding.effects) - MOST_EFFECTS, 'check')} more"
 
 
 def _remarks(audit: Audit, graph: Graph) -> Iterator[str]:

@@ -5,6 +5,8 @@ from __future__ import annotations
 from lineproof.drawing.font_widths import ITALIC_WIDTHS, ROMAN_WIDTHS
 from lineproof.drawing.shapes import Runs
 
+PAGE_WIDTH = 174.0
+"""Width of a figure across an upright page of A4 [mm on paper]."""
 SUB_SIZE = 0.68
 SUB_DROP = 0.17
 SUP_RISE = 0.36

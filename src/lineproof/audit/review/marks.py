@@ -21,6 +21,7 @@ from lineproof.audit.review.read import is_day
 from lineproof.errors import UserError
 from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, FOUND, GIVEN, LOOKUP, VALUES
+from lineproof.sentences import counted
 
 INPUTS = (GIVEN, LOOKUP, FOUND)
 TO_CHECK = (*VALUES, *CRITERIA)
@@ -165,7 +166,7 @@ class Standing:
     def open_items(self) -> tuple[str, ...]:
         """Say what keeps the calc from being signed off, lines by their numbers in print."""
         told = [
-            f"{_count(len(lines), 'line')} {what}: {_some(self.labels[line] for line in lines)}"
+            f"{counted(len(lines), 'line')} {what}: {_some(self.labels[line] for line in lines)}"
             for lines, what in (
                 (self.unmarked, "not marked"),
                 (self.stale, "marked before a change"),
@@ -175,7 +176,7 @@ class Standing:
         ]
         if self.open_findings:
             numbers = [str(number) for number in self.open_findings]
-            told.append(f"{_count(len(numbers), 'finding')} not closed: {_some(numbers)}")
+            told.append(f"{counted(len(numbers), 'finding')} not closed: {_some(numbers)}")
         return (*told, *(f"conflict: {self._numbered(each)}" for each in self.conflicts))
 
     def _numbered(self, each: Conflict) -> str:
@@ -211,10 +212,6 @@ def _state(marks: Iterable[Mark], need: Kind, digest: str) -> str:
         if any(m.state is state and m.kind is need and m.digest == digest for m in marks):
             return str(state.value)
     return "stale" if any(mark.digest != digest for mark in marks) else "unmarked"
-
-
-def _count(number: int, word: str) -> str:
-    return f"{number} {word}{'' if number == 1 else 's'}"
 
 
 def _some(names: Iterable[str]) -> str:

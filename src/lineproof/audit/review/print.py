@@ -15,7 +15,7 @@ from lineproof.package.reviewed import (
     PrintedStale,
 )
 from lineproof.record import Record
-from lineproof.sentences import begun
+from lineproof.sentences import begun, counted
 
 MOST_LINES = 60
 """Lines that a change has made stale are named up to here; of more only the number is told."""
@@ -127,7 +127,7 @@ class _Words:
         by = sorted({self.review.initials(mark.by) for mark in marks})
         return PrintedStale(
             why,
-            f"{len(marks)} mark{'' if len(marks) == 1 else 's'} by {', '.join(by)}",
+            f"{counted(len(marks), 'mark')} by {', '.join(by)}",
             self.lines(ids[:MOST_LINES]),
             f" and {len(ids) - MOST_LINES} more" if len(ids) > MOST_LINES else "",
         )

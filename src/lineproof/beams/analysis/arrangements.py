@@ -78,10 +78,18 @@ class Cases:
 
 def _named(spans: Iterable[int]) -> Arrangement:
     loaded = sorted(spans)
-    if not loaded:
-        return Arrangement("no live load", frozenset())
-    word = "span" if len(loaded) == 1 else "spans"
-    return Arrangement(f"live load on {word} {', '.join(map(str, loaded))}", frozenset(loaded))
+    return Arrangement(loaded_spans(loaded), frozenset(loaded))
+
+
+def loaded_spans(spans: Sequence[int]) -> str:
+    """Say on which spans live load stands.
+
+    >>> loaded_spans([1, 3]), loaded_spans([])
+    ('live load on spans 1, 3', 'no live load')
+    """
+    if not spans:
+        return "no live load"
+    return f"live load on span{'' if len(spans) == 1 else 's'} {', '.join(map(str, spans))}"
 
 
 _EVERYWHERE = Arrangement("", frozenset())

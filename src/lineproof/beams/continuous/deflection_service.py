@@ -17,7 +17,12 @@ from typing import Literal
 
 import numpy as np
 
-from lineproof.beams.analysis.arrangements import LIVE, Combination, service_combinations
+from lineproof.beams.analysis.arrangements import (
+    LIVE,
+    Combination,
+    loaded_spans,
+    service_combinations,
+)
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.analysis.model import Beam, Load, PartialLoad, PointLoad
 from lineproof.beams.analysis.solve import Row, Solution, solve
@@ -100,19 +105,12 @@ class ServiceMoments:
     @property
     def arrangement(self) -> str:
         """The spans with live load in words."""
-        return _in_words(self.live_spans)
+        return loaded_spans(self.live_spans)
 
     @property
     def lifting(self) -> str:
         """The spans with live load that lift the span in words; "" where that cannot govern."""
-        return _in_words(self.rise_spans) if "rise" in self.stages else ""
-
-
-def _in_words(spans: tuple[int, ...]) -> str:
-    if not spans:
-        return "no live load"
-    word = "span" if len(spans) == 1 else "spans"
-    return f"live load on {word} {', '.join(map(str, spans))}"
+        return loaded_spans(self.rise_spans) if "rise" in self.stages else ""
 
 
 def free_end(beam: Beam, span: int) -> FreeEnd:

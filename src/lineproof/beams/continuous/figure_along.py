@@ -25,9 +25,8 @@ from lineproof.drawing import (
     words,
 )
 from lineproof.drawing.axes import Axes, curve, nice_ticks, tick_texts
-from lineproof.drawing.metrics import text_width
+from lineproof.drawing.metrics import PAGE_WIDTH, text_width
 
-WIDTH = 174.0
 LEFT, RIGHT = 17.0, 4.0
 VALUE, NOTE, TICK_TEXT = 2.4, 2.6, 2.5
 LINE = 3.3
@@ -110,7 +109,7 @@ def along_figure(outline: BeamOutline, data: Along, caption: str) -> Figure:
     low, high = _range(outline, first, last)
     ticks = _ticks(data)
     span = (ticks[-1], ticks[0]) if data.downward else (ticks[0], ticks[-1])
-    probe = Axes(LEFT, 0.0, WIDTH - LEFT - RIGHT, data.height, (low, high), span)
+    probe = Axes(LEFT, 0.0, PAGE_WIDTH - LEFT - RIGHT, data.height, (low, high), span)
     over, under = _band(probe, data.above), _band(probe, data.below)
     legend = _legend(data)
     foot = 2.0 + LINE * len(legend) + 3.0
@@ -127,7 +126,13 @@ def along_figure(outline: BeamOutline, data: Along, caption: str) -> Figure:
         *_draw_legend(legend, foot),
     ]
     return Figure(
-        WIDTH, round(head + 4.5, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(data, caption), caption
+        PAGE_WIDTH,
+        round(head + 4.5, 1),
+        1.0,
+        (0.0, 0.0),
+        tuple(shapes),
+        _alt(data, caption),
+        caption,
     )
 
 
@@ -150,7 +155,7 @@ def _ticks(data: Along) -> tuple[float, ...]:
 def _band(axes: Axes, marks: Sequence[Mark]) -> _Band:
     widths = [max(text_width(line, VALUE) for line in mark.lines) for mark in marks]
     wanted = [axes.at(mark.x, 0.0)[0] for mark in marks]
-    places = in_rows(widths, wanted, LEFT - 1.0, WIDTH - 0.5) if marks else []
+    places = in_rows(widths, wanted, LEFT - 1.0, PAGE_WIDTH - 0.5) if marks else []
     lines = max((len(mark.lines) for mark in marks), default=0)
     row = lines * LINE + 1.2
     rows = 1 + max((number for number, _ in places), default=-1)
@@ -175,7 +180,7 @@ def _frame(
     names = [words(f"{x * MILLIMETRES:.2f}") for x in stations]
     widths = [text_width(name, TICK_TEXT) for name in names]
     wanted = [axes.at(x, 0.0)[0] for x in stations]
-    places = in_rows(widths, wanted, left - 10.0, WIDTH - 0.5)
+    places = in_rows(widths, wanted, left - 10.0, PAGE_WIDTH - 0.5)
     for name, (row, x) in zip(names, places, strict=True):
         shapes.append(Text((x, below - 2.2 - 3.0 * row), name, "axes", TICK_TEXT))
     rows = max(row for row, _ in places)
@@ -201,7 +206,7 @@ def _supports(axes: Axes, outline: BeamOutline, numbers: Sequence[int], head: fl
         shapes.append(Line((at, low), (at, high), "centre", THIN, "chain"))
     shapes += [
         Text((x, head + 2.0), name, "centre", NAME)
-        for name, x in support_names(held, middles, 1.0, WIDTH - 0.5)
+        for name, x in support_names(held, middles, 1.0, PAGE_WIDTH - 0.5)
     ]
     return shapes
 

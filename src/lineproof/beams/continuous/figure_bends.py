@@ -9,9 +9,9 @@ from lineproof.beams.continuous.bending import BentShape
 from lineproof.beams.continuous.figure_chain import Drawn, Part, ahead, chain
 from lineproof.beams.continuous.schedule import BarItem
 from lineproof.drawing import OUTLINE, Arc, Figure, Line, Point, Runs, Shape, Text, words
+from lineproof.drawing.metrics import PAGE_WIDTH
 from lineproof.drawing.shapes import Layer
 
-WIDTH = 174.0
 COLUMNS = 3
 NAME, LEG = 2.6, 2.4
 RADIUS = 1.3
@@ -50,7 +50,7 @@ def bends_figures(items: Sequence[BarItem]) -> tuple[Figure, ...]:
 
 def _grid(items: Sequence[BarItem]) -> Figure:
     cells = [_cell(item) for item in items]
-    pitch = WIDTH / COLUMNS
+    pitch = PAGE_WIDTH / COLUMNS
     rows = [cells[first : first + COLUMNS] for first in range(0, len(cells), COLUMNS)]
     heights = [max(cell.height for cell in row) for row in rows]
     total = sum(heights) + GAP * len(rows) + NOTE_HEIGHT
@@ -62,7 +62,7 @@ def _grid(items: Sequence[BarItem]) -> Figure:
         top -= height + GAP
     note = "Legs in mm, outside to outside, not to scale. In brackets: shape code of ISO 3766."
     shapes.append(Text((1.5, 2.0), words(note), "text", 2.6, "start"))
-    return Figure(WIDTH, round(total, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(items), CAPTION)
+    return Figure(PAGE_WIDTH, round(total, 1), 1.0, (0.0, 0.0), tuple(shapes), _alt(items), CAPTION)
 
 
 def _cell(item: BarItem) -> Cell:

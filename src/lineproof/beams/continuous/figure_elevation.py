@@ -12,7 +12,7 @@ from lineproof.beams.continuous.figure_elevation_bars import (
 )
 from lineproof.beams.continuous.figure_elevation_concrete import STUB, axis_lines, concrete
 from lineproof.beams.continuous.figure_elevation_gaps import Short, gap_notes, gap_shapes, shown
-from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View, parts, view
+from lineproof.beams.continuous.figure_elevation_view import View, parts, view
 from lineproof.beams.continuous.figure_elevation_zones import stirrup_lines, zone_block
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.drawing import (
@@ -27,7 +27,7 @@ from lineproof.drawing import (
     Text,
     words,
 )
-from lineproof.drawing.metrics import text_width
+from lineproof.drawing.metrics import PAGE_WIDTH, text_width
 from lineproof.drawing.paper import FIT_MARGIN
 from lineproof.quantity.digits import fixed
 

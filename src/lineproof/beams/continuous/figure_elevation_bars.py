@@ -15,7 +15,7 @@ from lineproof.beams.continuous.figure_elevation_cuts import (
     cut_lengths,
 )
 from lineproof.beams.continuous.figure_elevation_gaps import Short
-from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
+from lineproof.beams.continuous.figure_elevation_view import View
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.schedule import shape_of
 from lineproof.drawing import (
@@ -30,7 +30,7 @@ from lineproof.drawing import (
     Shape,
     Text,
 )
-from lineproof.drawing.metrics import text_width
+from lineproof.drawing.metrics import PAGE_WIDTH, text_width
 
 LABEL = 2.5
 """Text size of marks."""

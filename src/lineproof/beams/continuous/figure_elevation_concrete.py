@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
+from lineproof.beams.continuous.figure_elevation_view import View
 from lineproof.beams.continuous.figure_support_names import SIZE as NAME
 from lineproof.beams.continuous.figure_support_names import support_names
 from lineproof.drawing import (
@@ -15,6 +15,7 @@ from lineproof.drawing import (
     Shape,
     Text,
 )
+from lineproof.drawing.metrics import PAGE_WIDTH
 
 STUB = 4.5
 """Height of the column or wall drawn below the soffit, mm on paper."""

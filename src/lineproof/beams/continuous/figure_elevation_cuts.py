@@ -8,9 +8,9 @@ from itertools import product
 from typing import Literal
 
 from lineproof.beams.continuous.figure_elevation_gaps import Short
-from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
+from lineproof.beams.continuous.figure_elevation_view import View
 from lineproof.beams.continuous.layout import BarRun, Hook
-from lineproof.drawing.metrics import text_width
+from lineproof.drawing.metrics import PAGE_WIDTH, text_width
 from lineproof.drawing.paper import FIT_MARGIN
 
 NUMBER = 2.3

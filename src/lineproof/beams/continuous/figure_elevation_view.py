@@ -7,8 +7,8 @@ from dataclasses import dataclass
 
 from lineproof.beams.continuous.layout import BeamOutline, Detailing
 from lineproof.drawing import Point
+from lineproof.drawing.metrics import PAGE_WIDTH
 
-PAGE_WIDTH = 174.0
 MARGIN = 4.0
 SCALES = (20.0, 25.0, 40.0, 50.0, 75.0, 100.0, 125.0, 150.0, 200.0, 250.0, 300.0, 400.0, 500.0,
           600.0, 750.0, 1000.0, 1250.0, 1500.0, 2000.0, 2500.0, 5000.0, 10000.0)  # fmt: skip

@@ -4,12 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from lineproof.beams.continuous.figure_elevation_view import PAGE_WIDTH, View
+from lineproof.beams.continuous.figure_elevation_view import View
 from lineproof.beams.continuous.figure_rows import between, side_by_side
 from lineproof.beams.continuous.layout import StirrupZone, places_of
 from lineproof.drawing import MEDIUM, THIN, Line, Runs, Shape, Text
 from lineproof.drawing.axes import spread
-from lineproof.drawing.metrics import text_width
+from lineproof.drawing.metrics import PAGE_WIDTH, text_width
 
 SIZE = 2.3
 LINE, TICK = -2.0, 0.85

@@ -33,10 +33,9 @@ from lineproof.drawing import (
     Text,
     words,
 )
-from lineproof.drawing.metrics import text_width
+from lineproof.drawing.metrics import PAGE_WIDTH, text_width
 from lineproof.quantity.digits import fixed
 
-WIDTH = 174.0
 RIGHT = 7.0
 SIZE, NAME = 2.4, 2.8
 BAND, POINT = 3.0, 5.0
@@ -84,7 +83,7 @@ def loads_figure(
     kinds = list(dict.fromkeys(load.kind for load in loads))
     titles = {kind: (names or {}).get(kind, "") for kind in kinds}
     left = 6.0 + max((text_width(_title(kind, titles[kind]), NAME) for kind in kinds), default=6.0)
-    scale = (WIDTH - left - RIGHT) / sum(lengths)
+    scale = (PAGE_WIDTH - left - RIGHT) / sum(lengths)
     pen = _Pen(scale, left)
     axes = [sum(lengths[:number]) for number in range(len(lengths) + 1)]
     base = FOOT + GROUND + BEAM + 1.2
@@ -115,7 +114,7 @@ def loads_figure(
     spans = ", ".join(f"{length:.0f}" for length in lengths)
     alt = f"Beam of spans {spans} mm. " + ". ".join(lanes) + "."
     return Figure(
-        WIDTH,
+        PAGE_WIDTH,
         round(base + 1.0, 1),
         scale,
         (left, 0.0),
@@ -181,7 +180,7 @@ def _levels(pen: _Pen, stretches: Sequence[Stretch]) -> list[Placed]:
     for stretch in order:
         width = text_width(words(stretch.text), SIZE)
         low, high = pen.paper(stretch.start), pen.paper(stretch.end)
-        middle = min(max((low + high) / 2, width / 2 + 1.0), WIDTH - width / 2 - 1.0)
+        middle = min(max((low + high) / 2, width / 2 + 1.0), PAGE_WIDTH - width / 2 - 1.0)
         reach = (min(low, middle - width / 2), max(high, middle + width / 2))
         level = 0
         while any(

@@ -18,6 +18,7 @@ from lineproof.beams.continuous.model import ANALYSIS, Model
 from lineproof.beams.continuous.reactions import note_uplift
 from lineproof.beams.continuous.symbols import notation, numbered, required
 from lineproof.beams.steps import Steps
+from lineproof.sentences import counted
 
 _SIGNS = (
     "x runs from the left axis of each span; loads act downward, reactions upward. M is positive "
@@ -112,15 +113,11 @@ def _source_text(forces: ImportedForces) -> str:
     )
     return (
         f"Moments and shears come from the frame analysis of the office, not from an analysis in "
-        f"this calculation: file {file.name}, {_counted(len(cases), 'load case')} in "
-        f"{_counted(combinations, 'combination')}, {stations} rows of stations each, {torsion}. "
+        f"this calculation: file {file.name}, {counted(len(cases), 'load case')} in "
+        f"{counted(combinations, 'combination')}, {stations} rows of stations each, {torsion}. "
         "Arrangements of live load and lateral loads are those of the file; the load take-down "
         "above stands for comparison, no moment follows from it."
     )
-
-
-def _counted(number: int, what: str) -> str:
-    return f"{number} {what}" + ("" if number == 1 else "s")
 
 
 def _hash_text(file: ForcesFile) -> str:
