@@ -16,6 +16,7 @@ from lineproof.package.environment import Interned, Verbatim, typst_environment
 from lineproof.package.figures import drawing, paper_width
 from lineproof.package.heap import steady_heap
 from lineproof.package.model import Package
+from lineproof.package.read import RECORD_SUFFIX
 from lineproof.package.reviewed import REVIEW_MIME, REVIEW_SUFFIX, TALLY_HEADS
 from lineproof.record import MIME
 from lineproof.resources import folder
@@ -52,6 +53,7 @@ def typst_source(package: Package) -> tuple[str, str]:
         missing_note=MISSING_NOTE,
         record_mime=MIME,
         review_mime=REVIEW_MIME,
+        record_suffix=RECORD_SUFFIX,
         review_suffix=REVIEW_SUFFIX,
         tally_heads=TALLY_HEADS,
         year=str(package.facts.date.year),

@@ -18,7 +18,8 @@ _TAIL = 65_536
 _OPENED = re.compile(rf'<script type="{re.escape(MIME)}"[^<>]*>', re.IGNORECASE)
 _REVIEW = re.compile(rf'<script type="{re.escape(REVIEW_MIME)}"[^<>]*>', re.IGNORECASE)
 _CLOSED = re.compile(r"</script>", re.IGNORECASE)
-_SUFFIX = ".lineproof.json"
+RECORD_SUFFIX = ".lineproof.json"
+"""By which a record is known among the files attached to a PDF."""
 _PLACE = re.compile(r"Record (\d{1,4}) of ")
 
 
@@ -56,7 +57,7 @@ def records_in_pdf(content: bytes) -> list[dict[str, Any]]:
     """Return the records attached to a PDF package, in order; raises :class:`UserError`."""
     found = []
     for name, data in _attachments(content):
-        if not name.endswith(_SUFFIX):
+        if not name.endswith(RECORD_SUFFIX):
             continue
         try:
             text = data.decode("utf-8")
@@ -78,7 +79,7 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
     if b"startxref" not in content[-_TAIL:]:  # else the reader searches it all, line by line
         raise UserError("this PDF is damaged, its end is missing; give the whole file")
     try:
-        with _silent():
+        with silent():
             reader = pypdf.PdfReader(io.BytesIO(content))
             order = _printed_order(reader)
             found = [(name, part) for name, parts in reader.attachments.items() for part in parts]
@@ -91,8 +92,8 @@ def _attachments(content: bytes) -> list[tuple[str, bytes]]:
 
 
 @contextmanager
-def _silent() -> Iterator[None]:
-    """Keep pypdf from writing its warnings between our own sentences."""
+def silent() -> Iterator[None]:
+    """Keep the PDF library from writing its warnings between our own sentences."""
     logger = logging.getLogger("pypdf")
     level = logger.level
     logger.setLevel(logging.CRITICAL + 1)

@@ -117,21 +117,25 @@ def _within(view: View, row: Mapping[str, str]) -> bool:
     return start.isdigit() and float(start) <= length
 
 
-def _other_rules(view: View) -> Iterator[Caught]:
+def _half_depths(view: View) -> Iterator[Caught]:
     for node in view.lines("s_max"):
         for term in terms(node.tree) if node.tree is not None else ():
             used = names_of(term)
-            if used in (("d",), ("d_v",)):
-                length = view.number(node, used[0])
-                share = view.compute(node, **{used[0]: 1.0})
-                if length and share is not None and close(share, 0.5):
-                    yield Caught(
-                        node,
-                        "half the depth is the limit of another standard",
-                        "The lesser of 0.7 d_v and 600 mm.",
-                        Severity.MINOR,
-                        "11.3.8.1",
-                    )
+            if used not in (("d",), ("d_v",)) or not view.number(node, used[0]):
+                continue
+            share = view.compute(node, **{used[0]: 1.0})
+            if share is not None and close(share, 0.5):
+                yield Caught(
+                    node,
+                    "half the depth is the limit of another standard",
+                    "The lesser of 0.7 d_v and 600 mm.",
+                    Severity.MINOR,
+                    "11.3.8.1",
+                )
+
+
+def _other_rules(view: View) -> Iterator[Caught]:
+    yield from _half_depths(view)
     for node in view.lines("V_s"):
         if "A_v" in names(node) and "theta" not in names(node):
             yield Caught(

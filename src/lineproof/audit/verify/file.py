@@ -3,20 +3,18 @@
 from __future__ import annotations
 
 import io
-import logging
 import re
 from collections.abc import Iterator
-from contextlib import contextmanager
 from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.package import records_in_pdf
+from lineproof.package.read import RECORD_SUFFIX
 from lineproof.package.reviewed import REVIEW_SUFFIX
 from lineproof.record import Record
 
 END = re.compile(rb"%%EOF[\r\n]{0,2}")
 """Where a revision of a PDF ends."""
-_SUFFIX = ".lineproof.json"
 _TABLE_AT = re.compile(rb"startxref\s+(\d{1,12})\s")
 _TABLE = re.compile(rb"\s*(?:xref|\d+ \d+ obj)")
 _HEAD, _TAIL = 1024, 4096
@@ -30,18 +28,6 @@ _NUMBERED = re.compile(r"Page\s+\d+\s+of\s+\d+")
 def is_pdf(content: bytes) -> bool:
     """Tell whether a file begins as a PDF."""
     return b"%PDF-" in content[:_HEAD]
-
-
-@contextmanager
-def silent() -> Iterator[None]:
-    """Keep the PDF library from writing its warnings between our own sentences."""
-    logger = logging.getLogger("pypdf")
-    level = logger.level
-    logger.setLevel(logging.CRITICAL + 1)
-    try:
-        yield
-    finally:
-        logger.setLevel(level)
 
 
 def _table_found(content: bytes) -> bool:
@@ -87,7 +73,7 @@ class File:
 
     def records(self) -> list[Record]:
         """Return the records attached, in order; raises :class:`UserError`."""
-        if not any(name.endswith(_SUFFIX) for name in self.attached):
+        if not any(name.endswith(RECORD_SUFFIX) for name in self.attached):
             return []
         return [Record.from_data(data) for data in records_in_pdf(self.content)]
 

@@ -8,7 +8,7 @@ from dataclasses import dataclass, field, replace
 from typing import Any
 
 from lineproof.audit.verify.data import Alteration, Outcome, Outside, Proof, Verification, Where
-from lineproof.audit.verify.file import END, File, silent
+from lineproof.audit.verify.file import END, File
 from lineproof.audit.verify.page import Document, Keys, Kind, Mark, Zone
 from lineproof.audit.verify.printed import compare_pages
 from lineproof.audit.verify.record import (
@@ -22,6 +22,7 @@ from lineproof.audit.verify.record import (
 )
 from lineproof.errors import UserError
 from lineproof.package import to_pdf
+from lineproof.package.read import silent
 from lineproof.record import Record
 
 _FOOTER = re.compile(r"Record ([0-9a-f]{16}[0-9a-f ]*…?)\Z")
