@@ -33,6 +33,7 @@ from lineproof.beams.continuous.cutoff import (
     continuing_length,
     extension,
     floor50,
+    full_area,
     full_moment,
     half_of,
     least_step,
@@ -129,15 +130,43 @@ def _lay_span(frame: Frame, span: int) -> tuple[BarRun, ...]:
     groups = groups_of(designed.bars.bottom[span - 1])
     groups = tuple(replace(run, serves=f"span {span}") for run in groups)
     ends = {near: _anchored(designed, span, near, groups) for near in SIDES}
+    past = {near: _going_past(designed, span, near, groups) for near in SIDES}
     runs = list(groups)
     for near in SIDES:
         t = support_end(designed, span, near)
         runs = [_ended(designed, span, near, run, t, ends[near].hook) for run in runs]
+        for index in range(1, past[near] + 1):
+            beyond = floor50(-development_length(designed, runs[index]))
+            runs[index] = _ended(designed, span, near, runs[index], beyond)
     if designed.cantilever(span):
         return tuple(runs)
     for near in SIDES:
-        runs = _cut_side(frame, span, near, runs, ends[near].running_in)
+        runs = _cut_side(frame, span, near, runs, max(ends[near].running_in, past[near]))
     return tuple(runs)
+
+
+def _going_past(designed: Designed, span: int, near: End, groups: Sequence[BarRun]) -> int:
+    """Return how many groups beside the corners go past an interior support, to be developed there.
+
+    As few as carry the bottom tension from its face to its axis: where lateral loads turn the
+    moment at a support, bars that end in it do not. None where the soffit steps.
+    """
+    support = support_of(span, near)
+    depths = designed.outline.depths
+    beside = span - 1 if near == "left" else span + 1
+    if not designed.held(support) or designed.exterior(support):
+        return 0
+    if depths[span - 1] != depths[beside - 1]:
+        return 0
+    places = local(designed, span, near, np.array([0.0, half_of(designed, span, near)]))
+    side = demand_at(designed, span, places).bottom
+    M, F = float(side.M.max()) / MARGIN, float(side.F.max()) / MARGIN
+    for number in range(len(groups)):
+        going = groups[: number + 1]
+        F_r = full_area(designed, going)[0] * yield_force(designed)
+        if F_r >= F and full_moment(designed, "bottom", span, going) >= M:
+            return number
+    return len(groups) - 1
 
 
 def support_end(designed: Designed, span: int, near: End) -> float:
