@@ -194,3 +194,22 @@ def test_no_number_of_bars_holds_everything() -> None:
     bare = bare_of(spans=["5.5 m"], supports=["wall 250 mm"] * 2)
 
     assert least_anchored(bare, 1, "15M", 1e5) == float("inf")
+
+
+def test_bars_developed_in_part_are_counted_whole_for_cracks() -> None:
+    """3-25M hooked in a support 300 mm wide: z by 10.6.1 with n = 3, though less than 3 develop.
+
+    d_c = d_s = 30 + 11.3 + 25.2/2 = 53.9 mm; A = 2*53.9*380/3 = 13 655 mm2 a bar;
+    z = 0.6*400*(53.9*13 655)**(1/3) = 21 670 N/mm. The area that counts for the moment is less:
+    l_hb = 100*25.2/sqrt(32) = 445 mm, and 300 - 50 = 250 mm stand there.
+    """
+    beam = flow.start(
+        spans=["6 m", "6 m"], supports=["wall 300 mm, fixed", "column 450 mm", "wall 300 mm"],
+        shape="rectangular", h_f=None, floor_weight="3.4 kPa", top_bars=["3-25M"] * 3,
+    )  # fmt: skip
+    flow.run(beam, ["loads", "spans", "analysis", "flexure"])
+
+    face = beam.sheet.entries_of("hog-1-right")
+    assert face["n_z"].value == 3.0
+    assert face["z"].value == pytest.approx(240 * (53.9 * 2 * 53.9 * 380 / 3) ** (1 / 3), rel=1e-9)
+    assert face["steel-for-moment"].value[1] < 1500.0

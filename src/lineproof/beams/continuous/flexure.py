@@ -110,6 +110,7 @@ def record_sag(design: Design, span: int) -> None:
             minimum_of(
                 steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
             )
+            _count_standing(steps)
             cracks_inside(steps, inputs.exposure, layers)
         if steps.decide(NEEDS_SKIN):
             side = design.side_bars(span, sag_at(design.designed, span))
@@ -316,13 +317,21 @@ def _record_face(
     )  # fmt: skip
     if inputs.slab:
         _check_spread(steps, top)
+    _count_standing(steps)
     cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape])
     if steps.holds(NEEDS_SKIN):
         x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
         record_skin(steps, inputs.exposure, design.side_bars(face.span, x))
     _take(steps, _SHARED)
-    made = dict(sheet.part_entries) | dict(counts)
+    made = dict(sheet.part_entries) | dict(counts) | {"A_s": steps.entry("A_s")}
     return {name: made[name] for name in _SHARED if name in made}
+
+
+def _count_standing(steps: Steps) -> None:
+    """Let A_s be the bars as they stand, for their number: a crack meets each, developed or not."""
+    standing = steps.sheet.part_entries.get("A_s")
+    if standing is not None:  # bars of several sizes have none: those that count stand for all
+        steps.bind(A_s=standing)
 
 
 def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:

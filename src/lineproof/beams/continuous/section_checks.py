@@ -200,6 +200,7 @@ def top_checks(
     M_crn. ``counted`` is the part of the area that the support anchors.
     """
     made = put_top(at, rules.shape, top, stirrup)
+    standing = at["A_s"]
     at["A_s"] *= counted
     flange = at.pop("h_f", None)
     at["b"] = at["b_w"]
@@ -208,7 +209,7 @@ def top_checks(
         at["h_f"] = flange
     made |= _minimum(at, rules, TENSION_WIDTHS[rules.shape], top=True)
     at["A_b"] = max(BARS.number(group.size, "A_b") for group in top.groups)
-    return made | _cracks(at, TENSION_AREAS[rules.shape])
+    return made | _cracks(at | {"A_s": standing}, TENSION_AREAS[rules.shape])
 
 
 def fails(checks: Checks) -> bool:
