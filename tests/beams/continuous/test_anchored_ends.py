@@ -11,6 +11,7 @@ from typing import Any
 import pytest
 
 from lineproof.beams.bars import BarLayer, TopBars
+from lineproof.beams.continuous.anchorage import hook_at
 from lineproof.beams.continuous.anchored_ends import end_hook, least_anchored, top_part
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars
 from lineproof.beams.continuous.layout import BarRun
@@ -213,3 +214,11 @@ def test_bars_developed_in_part_are_counted_whole_for_cracks() -> None:
     assert face["n_z"].value == 3.0
     assert face["z"].value == pytest.approx(240 * (53.9 * 2 * 53.9 * 380 / 3) ** (1 / 3), rel=1e-9)
     assert face["steel-for-moment"].value[1] < 1500.0
+
+
+def test_ties_of_15m_stand_on_whole_mm_where_five_leave_no_clear_space() -> None:
+    """Hooks of 15M: at most 3*16 = 48 mm; ties of 15M need 16 + max(22.4, 28, 30) = 46 mm."""
+    bare = bare_of(stirrup="15M", supports=["girder 400 mm", *["column 450 mm"] * 3])
+    assert hook_at(bare, 1, "15M").s_tie == 48.0
+    assert hook_at(bare, 1, "20M").s_tie == 55.0, "58.5 mm on the step of 5 mm"
+    assert hook_at(bare_of(), 1, "15M").s_tie == 45.0, "ties of 10M need 41.3 mm"

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from bisect import bisect_left, bisect_right
 from collections.abc import Iterable
 from dataclasses import dataclass
@@ -245,7 +246,19 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
         k_hd=hooks.DENSITY_FACTORS.number(s.density, "k_hd"),
         k_he=hooks.COATING_FACTORS.number("none", "k_he"), l_hb=l_hb, d_b=d_b,
     )  # fmt: skip
-    return HookLength(size, c_side, c_tail, c_top, tied, tie_spacing(d_b), l_hb, l_dh)
+    s_tie = _tie_spacing_apart(designed, d_b)
+    return HookLength(size, c_side, c_tail, c_top, tied, s_tie, l_hb, l_dh)
+
+
+def _tie_spacing_apart(designed: Designed, d_b: float) -> float:
+    """Return the spacing of ties around hooks; on whole mm where the step leaves no clear space."""
+    stepped, whole = tie_spacing(d_b), float(math.floor(3 * d_b))
+    given = {
+        "d_bs": BARS.number(designed.basis.stirrups.size, "d_b"),
+        "a_max": designed.strengths.a_max,
+    }
+    clear = (s for s in (stepped, whole) if holds(hooks.TIES_CLEAR, s_tie=s, **given))
+    return next(clear, stepped)
 
 
 def tie_spacing(d_b: float) -> float:
