@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from pathlib import Path
 from typing import Any
 
 import numpy as np
@@ -27,7 +28,8 @@ from lineproof.beams.continuous.shear_state import near_point_loads
 from lineproof.errors import UserError
 
 from ..analysis.random_beams import beams, loads_on, repeatable  # noqa: TID252 - shared strategies
-from .frame_files import HEADER, Torsion, no_torsion, rows_of
+from .flow import CALLS, run, start
+from .frame_files import HEADER, Torsion, no_torsion, rows_of, write
 
 EXACT = 1e-9
 COLUMN = Support("simple", 450.0)
@@ -212,3 +214,29 @@ def test_cantilever_comes_in() -> None:
     rest = [f"2,{x!r},a,b,{-40.0 + 5.0 * x!r},5.0,0" for x in range(9)]
     hog = read(beam, tip + rest).hog(2, "left")
     assert pytest.approx((-35.5e6, -20e3), rel=EXACT) == (hog.M, hog.V)
+
+
+def test_a_point_torque_near_a_support_takes_the_section_to_the_face(tmp_path: Path) -> None:
+    """30 kN.m at 0.5 m of 8 m, both ends held: 30*7.5/8 = 28.125 on the left, -1.875 on the right.
+
+    The wall is 0.3 m wide: the face stands at 0.15 m, and 0.15 + d_v is beyond 0.5 m. Between face
+    and torque the torsion is 28.125 kN.m, not the 1.875 kN.m at d_v, which would not even count.
+    """
+    lines, w = [], 40.0
+    stations = sorted({*(n * 0.4 for n in range(21)), 0.5})
+    for x in stations:
+        M, V = w * x * (8.0 - x) / 2, w * (4.0 - x)
+        torsions = (28.125, -1.875) if x == 0.5 else (28.125,) if x < 0.5 else (-1.875,)
+        lines += [f"1,{x:.3f},all,1.25D + 1.5L,{M:.6f},{V:.6f},{T}" for T in torsions]
+    beam = start(
+        spans=["8 m"], supports=["wall 300 mm"] * 2, forces_csv=write(tmp_path / "f.csv", lines),
+        closed_stirrups=True, torsion="equilibrium",
+    )  # fmt: skip
+    run(beam, CALLS[:5])
+
+    left, right = (beam.sheet.entries_of(f"shear-1-{end}") for end in ("left", "right"))
+    assert left["x_f"].value == 150.0
+    assert left["T_f"].value == pytest.approx(28.125e6)
+    assert left["torsion-counts"]
+    assert right["x_f"].value > 600.0
+    assert right["T_f"].value == pytest.approx(1.875e6)

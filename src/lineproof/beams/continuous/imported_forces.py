@@ -153,6 +153,22 @@ class ImportedForces(Forces):
             made = np.where(here & (np.abs(value) > np.abs(made)), value, made)
         return made
 
+    def point_torque(self, span: int, low: float, high: float) -> Floats:
+        """Return by how much T jumps at stations from low to high [mm], by case [N.mm].
+
+        Both are from the left axis of the span. A jump is a change within a station, or over a
+        piece too short to be a length.
+        """
+        T = self.source.imported.T
+        made = np.zeros(len(T))
+        pieces = self.pieces[span - 1]
+        pairs = [(a.x_j, a.j, b.i) for a, b in pairwise(pieces)]
+        pairs += [(p.x_i, p.i, p.j) for p in pieces if p.x_j - p.x_i <= SHORT]
+        for x, i, j in pairs:
+            if low <= x <= high:
+                made += np.abs(T[:, j] - T[:, i])
+        return made
+
     def moment_column(self, row: int, column: int) -> int:
         """Return where the moment at a station stands: the larger, if it is written twice."""
         stations, M = self.source.imported.envelope.stations, self.source.imported.envelope.M

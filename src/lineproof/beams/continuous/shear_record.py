@@ -18,6 +18,8 @@ _AT_FACE = {
     "below, and the shear is taken at the face of the girder.",
     "uplift": "In this load case the support pulls the beam down: its reaction does not press on "
     "the beam, and the shear is taken at the face of the support.",
+    "point torque": "A point torque acts nearer to the support than the effective shear depth: "
+    "between it and the face the torsion is larger, and the section is taken at the face.",
     "free": "The end is free: the shear is taken at the end itself.",
 }
 _AT_D_V = "The support presses on the beam from below{loads}: sections nearer to the support than "

@@ -14,6 +14,7 @@ import numpy as np
 
 from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.curves import Floats, Side
+from lineproof.beams.analysis.imported import TOLERANCE
 from lineproof.beams.analysis.model import PartialLoad, PointLoad
 from lineproof.beams.continuous.forces import End, Forces
 from lineproof.beams.continuous.imported_forces import ImportedForces
@@ -299,8 +300,10 @@ def _critical(
     small = holds(shear.NEAR_POINT_LOADS, _materials(basis) | {"V_pl": V_pl, "d_v": d_v})
     pushed = V[:, 0] > 0 if end.end == "left" else V[:, 0] < 0
     support = end.numbers.left if end.end == "left" else end.numbers.right
+    turned = _point_torques(forces, end)
     reason = tuple(
-        _reason(support.held, *each) for each in zip(pushed.tolist(), small.tolist(), strict=True)
+        _reason(support.held, pushed=up, small=few, turned=torque)
+        for up, few, torque in zip(pushed.tolist(), small.tolist(), turned.tolist(), strict=True)
     )
     column = np.where([not each for each in reason], which + 1, 0)
     d = np.array([*end.depths, min(end.depths)])[np.where(bottom, 0, np.where(top, 1, 2))]
@@ -308,11 +311,28 @@ def _critical(
     return Critical(x, M[rows, column], V[rows, column], d, V_pl, reason, ~(bottom | top))
 
 
-def _reason(held: str, pushed: bool, small: bool) -> str:  # noqa: FBT001 - two truths of one case
+def _point_torques(forces: Forces, end: _End) -> Truths:
+    """Tell in which cases an imported point torque acts between the face and d_v from it.
+
+    Sections nearer to the support then have a larger torsion than the one at d_v. What files leave
+    by rounding is none.
+    """
+    if not isinstance(forces, ImportedForces):
+        return np.zeros(len(forces.cases), dtype=bool)
+    span, reach = end.numbers.span, max(end.d_v)
+    low, high = (end.face, end.face + reach) if end.end == "left" else (end.face - reach, end.face)
+    largest = np.abs(forces.imported_torsion(span, forces.solved.solution.span(span).breaks))
+    made: Truths = forces.point_torque(span, low, high) > TOLERANCE * largest.max(axis=1)
+    return made
+
+
+def _reason(held: str, *, pushed: bool, small: bool, turned: bool) -> str:
     if held != "direct":
         return held
     if not pushed:
         return "uplift"
+    if turned:
+        return "point torque"
     return "" if small else "point load"
 
 
