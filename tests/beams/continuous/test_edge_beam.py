@@ -18,7 +18,7 @@ from lineproof.record import recompute
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
 from .edge_beam import TURNED, Edge, edge, failing, make
-from .flow import CALLS, MIXED, start
+from .flow import CALLS, MIXED, run, start
 
 
 @pytest.fixture(scope="module")
@@ -310,3 +310,26 @@ def test_a_reaction_that_is_not_sought_is_a_dash(
     assert all(cell for row in table["rows"] for cell in row)
     assert "–" in table["rows"][1]
     assert "–" not in table["rows"][0]
+
+
+def test_bars_that_heavy_torsion_strains_too_much_are_chosen_anew() -> None:
+    """All the torsion of 40 kN.m a metre: more bars are chosen until the strain is in range.
+
+    A_oh = (500 - 80 - 11.3)*(800 - 80 - 11.3) = 289 646 mm2, p_h = 2*(408.7 + 708.7) = 2234.8 mm,
+    A_o = 0.85*A_oh = 246 199 mm2. At every section with torsion the strain
+    (max(M_f/d_v, V_f) + sqrt(V_f**2 + (0.9*p_h*T_f/(2*A_o))**2))/(2*200 000*A_s) stays below 0.003.
+    """
+    beam = edge(
+        h="800 mm", b_w="500 mm", torsion="equilibrium", torques={"D": "40 kN.m"}, loads=[],
+    )  # fmt: skip
+    sheet = run(beam)
+
+    assert failing(sheet) == []
+    strains = []
+    for part in sheet.parts:
+        names = ("M_f", "V_f", "T_f", "d_v", "A_s")
+        if part.key.startswith("shear-") and {"V_fe", *names} <= part.entries.keys():
+            M_f, V_f, T_f, d_v, A_s = (part.entries[name].value for name in names)
+            V_fe = math.hypot(V_f, 0.9 * 2234.8 * T_f / (2 * 246199))
+            strains.append((max(M_f / d_v, V_f) + V_fe) / (2 * 200e3 * A_s))
+    assert 0.001 < max(strains) < 0.003

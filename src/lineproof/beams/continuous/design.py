@@ -50,6 +50,7 @@ from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import Standing, stand
 from lineproof.beams.continuous.resistance_cover import Coverage, covered
+from lineproof.beams.continuous.shear_choice import refuse_strained
 from lineproof.beams.continuous.shear_stretches import (
     basis_of,
     span_numbers,
@@ -162,6 +163,8 @@ def design_of(model: Model, pair: CodePair) -> Design:
             standing = stand(made.designed, made.runs)
             further = more(asked, made.stirrups.checks, made.designed, standing, free)
         if further is None:
+            if model.inputs.stirrups is None and not model.inputs.bars_given:
+                refuse_strained([check.state for check in made.stirrups.checks])
             return replace(made, raised=_raised(first, made))
         asked = further
         made = _designed(model, pair, basis, (given, *sections), asked, made)
@@ -275,9 +278,7 @@ def _text(bars: Bars) -> str:
 def _stirrups(model: Model, designed: Designed, runs: Sequence[BarRun]) -> Choice:
     basis, spans = basis_of(model), span_numbers(model, designed, runs)
     if model.inputs.stirrups is None:
-        return choose_stirrups(
-            designed.outline, model.forces, basis, spans, bars_given=model.inputs.bars_given
-        )
+        return choose_stirrups(designed.outline, model.forces, basis, spans)
     return check_stirrups(designed.outline, model.forces, basis, spans, model.inputs.stirrups)
 
 

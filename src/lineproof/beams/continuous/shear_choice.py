@@ -15,6 +15,7 @@ import numpy as np
 
 from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.shear_arrays import Truths
+from lineproof.beams.continuous.shear_resistance import MOST_STRAIN
 from lineproof.beams.continuous.shear_state import SpanState
 from lineproof.beams.continuous.stirrups import FROM_FACE, SpanLayout, changes, grid, lay
 from lineproof.errors import UserError
@@ -90,16 +91,14 @@ class _Pair:
     runs: tuple[tuple[float, float] | None, ...]
 
 
-def choose_layouts(
-    states: Sequence[SpanState], *, bars_given: bool = False
-) -> tuple[SpanLayout, ...]:
+def choose_layouts(states: Sequence[SpanState]) -> tuple[SpanLayout, ...]:
     """Return the layout of every span; raises :class:`UserError` where no stirrups can do.
 
-    Where bars are given that are too weak for the method, the stirrups are those at the largest
-    strain it knows; the check of the strain then fails.
+    Where the bars are too weak for the method, the stirrups are those at the largest strain it
+    knows; the check of the strain then fails.
     """
     refuse_open(states)
-    _refuse_hopeless(states, bars_given=bars_given)
+    _refuse_crushed(states)
     fits = [Fitting.of(state) for state in states]
     spacings = grid(states[0].basis.d_bs)
     most = min(float(fit.widest.min()) for fit in fits)
@@ -193,9 +192,19 @@ def _short_ends(fit: Fitting, layout: SpanLayout, run: tuple[float, float]) -> t
     return wrong[0], wrong[1]
 
 
-def _refuse_hopeless(states: Sequence[SpanState], *, bars_given: bool) -> None:
-    """Refuse spans that no stirrups help: web too small, strain out of range."""
-    faults = [fault for state in states for fault in _hopeless(state, bars_given=bars_given)]
+def _refuse_crushed(states: Sequence[SpanState]) -> None:
+    """Refuse spans whose web is too small, which neither stirrups nor bars help."""
+    faults = [fault for state in states for fault in _crushed(state)]
+    if faults:
+        raise UserError(faults)
+
+
+def refuse_strained(states: Sequence[SpanState]) -> None:
+    """Refuse spans whose bars leave the strain out of the range of the method.
+
+    That is so where the bars are open and all that moment, shear and torsion ask for stand.
+    """
+    faults = [fault for state in states for fault in _strained(state)]
     if faults:
         raise UserError(faults)
 
@@ -227,22 +236,29 @@ def _open_with_torsion(state: SpanState) -> Iterator[str]:
         yield f"stirrup_legs: {where}, but {state.basis.legs} are given; write 2 legs, closed"
 
 
-def _hopeless(state: SpanState, *, bars_given: bool) -> Iterator[str]:
-    worst = state.crushing if bars_given else state.hopeless
+def _strained(state: SpanState) -> Iterator[str]:
+    v, span = state.v, state.numbers.span
+    strain = v["eps_asked"]
+    row, column = np.unravel_index(int(strain.argmax()), strain.shape)
+    if strain[row, column] <= MOST_STRAIN:
+        return
+    face = "bottom" if v["bottom"][row, column] else "top"
+    yield (
+        f"{face}_bars: span {span}, {state.columns[column] / 1000:.2f} m from its left axis: the "
+        f"longitudinal strain leaves the range of the general method; write more {face} bars "
+        "there, or a deeper beam"
+    )
+
+
+def _crushed(state: SpanState) -> Iterator[str]:
+    worst = state.crushing
     row, column = np.unravel_index(int(worst.argmax()), worst.shape)
     if worst[row, column] <= 1:
         return
-    v, span = state.v, state.numbers.span
-    place = f"span {span}, {state.columns[column] / 1000:.2f} m from its left axis"
-    if v["eps_asked"][row, column] > 0.003 and not bars_given:  # noqa: PLR2004 - 11.3.6.4
-        face = "bottom" if v["bottom"][row, column] else "top"
-        yield (
-            f"{face}_bars: {place}: the longitudinal strain leaves the range of the general "
-            f"method; write more {face} bars there, or a deeper beam"
-        )
-        return
+    v = state.v
     yield (
-        f"b_w: {place}: shear {'and torsion use' if v['counts'][row, column] else 'uses'} "
+        f"b_w: span {state.numbers.span}, {state.columns[column] / 1000:.2f} m from its left axis: "
+        f"shear {'and torsion use' if v['counts'][row, column] else 'uses'} "
         f"{100 * worst[row, column]:.0f} % of what the web carries before it crushes, which no "
         "stirrups help; write a wider web, a deeper beam or stronger concrete"
     )

@@ -60,16 +60,15 @@ def choose_stirrups(
     forces: Forces,
     basis: ShearBasis,
     spans: Sequence[SpanNumbers],
-    *,
-    bars_given: bool = False,
 ) -> Choice:
     """Choose the stirrups of a beam; raises :class:`UserError` with every reason why none can do.
 
-    The order is that of :mod:`shear_choice`. ``bars_given`` bars are not to be asked for more:
-    where they are too weak, their checks fail.
+    The order is that of :mod:`shear_choice`. Bars that are too weak for the method are no reason:
+    more are asked for where they are open (:func:`shear_choice.refuse_strained`), else their
+    checks fail.
     """
     states = _states(forces, basis, spans)
-    layouts = choose_layouts(states, bars_given=bars_given)
+    layouts = choose_layouts(states)
     checks: list[SpanCheck] = []
     zones: list[StirrupZone] = []
     reasons: list[str] = []
