@@ -333,3 +333,10 @@ def test_bars_that_heavy_torsion_strains_too_much_are_chosen_anew() -> None:
             V_fe = math.hypot(V_f, 0.9 * 2234.8 * T_f / (2 * 246199))
             strains.append((max(M_f / d_v, V_f) + V_fe) / (2 * 200e3 * A_s))
     assert 0.001 < max(strains) < 0.003
+
+
+def test_stirrups_too_close_for_torsion_ask_for_no_more_legs() -> None:
+    """More than two legs are refused where torsion counts; thicker ones or a larger beam help."""
+    beam = edge(torsion="equilibrium", torques={"D": "25 kN.m"}, loads=[])
+    with pytest.raises(UserError, match="write thicker stirrups or a larger section"):
+        run(beam)

@@ -264,6 +264,11 @@ def _crushed(state: SpanState) -> Iterator[str]:
     )
 
 
+def _instead(state: SpanState) -> str:
+    """Return what helps beside thicker stirrups: more legs only where no torsion goes around."""
+    return "a larger section" if state.v["counts"].any() else "more legs"
+
+
 def _too_close(states: Sequence[SpanState], fits: Sequence[Fitting], least: float) -> Iterator[str]:
     for state, fit in zip(states, fits, strict=True):
         needed = fit.widest
@@ -274,5 +279,5 @@ def _too_close(states: Sequence[SpanState], fits: Sequence[Fitting], least: floa
             f"stirrup: span {state.numbers.span}, {state.columns[column] / 1000:.2f} m from its "
             f"left axis: {state.basis.legs} legs {state.basis.stirrup} would have to stand at "
             f"{needed[column]:.0f} mm, closer than the {least:g} mm that leave room for placing "
-            "the concrete; write thicker stirrups or more legs"
+            f"the concrete; write thicker stirrups or {_instead(state)}"
         )
