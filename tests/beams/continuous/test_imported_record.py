@@ -482,3 +482,22 @@ def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) 
     assert entries["W_f1"].value == pytest.approx(84e3)
     assert entries["W_d1"].value == pytest.approx(334.51e3, abs=10)
     assert check.value == pytest.approx((0.9 * 334.51e3, 84e3), abs=10)
+
+
+def test_moments_and_shears_of_the_opposite_sign_are_told(tmp_path: Path) -> None:
+    """Signs turned throughout close by statics; their load runs upward: V rises by 84 kN."""
+    rows = [
+        f"1,{x / 2},all,1.25D+1.5L,{6 * (x / 2) ** 2 - 42 * x / 2},{6 * x - 42}" for x in range(15)
+    ]
+    beam = analysed(
+        spans=["7 m"], supports=["column 450 mm"] * 2,
+        forces_csv=frame_files.write(
+            tmp_path / "frame.csv", rows, "span,station (m),case,combination,M (kN.m),V (kN)"
+        ),
+    )  # fmt: skip
+
+    check = beam.sheet.entries_of("analysis")["imported-load-1"]
+    assert not check
+    assert check.value[1] == pytest.approx(-84e3)
+    said = record_so_far(beam).entries["analysis/imported-load-1"]["conclusion"]
+    assert "its M and V have the opposite signs" in said
