@@ -501,3 +501,28 @@ def test_moments_and_shears_of_the_opposite_sign_are_told(tmp_path: Path) -> Non
     assert check.value[1] == pytest.approx(-84e3)
     said = record_so_far(beam).entries["analysis/imported-load-1"]["conclusion"]
     assert "its M and V have the opposite signs" in said
+
+
+def test_a_case_that_one_combination_lacks_leaves_it_in_a_row_of_its_own(tmp_path: Path) -> None:
+    """Sway to both sides in two combinations of three: the third has one direction only."""
+    named = [
+        ("1.25D + 1.4W + 0.5L", "sway left"), ("1.25D + 1.4W + 0.5L", "sway right"),
+        ("1.0D + 1.0E + 0.5L", "sway right"), ("1.0D + 1.0E + 0.5L", "sway left"),
+        ("0.9D + 1.4W", "sway right"),
+    ]  # fmt: skip
+    rows = [
+        f"1,{x / 2},{case},{combination},{42 * x / 2 - 6 * (x / 2) ** 2},{42 - 6 * x}"
+        for combination, case in named
+        for x in range(15)
+    ]
+    beam = analysed(
+        spans=["7 m"], supports=["column 450 mm"] * 2,
+        forces_csv=frame_files.write(
+            tmp_path / "frame.csv", rows, "span,station (m),case,combination,M (kN.m),V (kN)"
+        ),
+    )  # fmt: skip
+
+    assert record_so_far(beam).entries["analysis/imported-combinations"]["rows"] == [
+        ["1.25D + 1.4W + 0.5L; 1.0D + 1.0E + 0.5L", "sway left; sway right", "2"],
+        ["0.9D + 1.4W", "sway right", "1"],
+    ]
