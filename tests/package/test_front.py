@@ -5,6 +5,7 @@ from __future__ import annotations
 import copy
 import io
 import re
+from dataclasses import replace
 from typing import Any
 
 import pypdf
@@ -258,6 +259,31 @@ def test_what_all_calcs_say_is_said_once(several: Package, printed: list[str], p
     for once in ("Gravity beams only", "These stand as remembered", "factored moment kN"):
         assert text.count(once) == 1
         assert once == "factored moment kN" or page.count(once) == 1
+
+
+def test_what_one_calc_alone_does_not_cover_stands_behind_what_none_covers(
+    holding: Record, failing: Record
+) -> None:
+    """The lists differ in one check: no calc gets a box of its own for that."""
+    drift, torsion = ({"check": c, "clause": n} for c, n in (("Drift", "21.11"), ("Torsion", "")))
+    first = holding | {"status": holding["status"] | {"not_covered": [torsion, drift]}}
+    second = failing | {"status": failing["status"] | {"not_covered": [drift]}}
+    package = build_package([first, second])
+    (box,) = package.scopes
+    assert box.calcs == "B9, B10"
+    assert box.not_covered == "Not covered yet: Drift (21.11). Not covered yet in B9 only: Torsion."
+    assert [each.calcs for each in package.not_covered] == ["B9, B10", "B9"]
+
+
+def test_of_several_calcs_the_cover_names_three_failures_each_and_keeps_its_seal(
+    several: Package,
+) -> None:
+    holds, fails = several.calcs
+    many = replace(several, calcs=(holds, replace(fails, failures=fails.failures * 14)))
+    cover = pages(to_pdf(many))[0]
+    assert cover.count("B10 2.3 Moment resistance") == 3
+    for said in ("14 checks do not hold:", "and 11 more of B10", "Seal of the", "not valid until"):
+        assert said in cover
 
 
 def test_values_to_confirm_are_merged_by_clause(several: Package, printed: list[str]) -> None:

@@ -47,6 +47,11 @@ class NotCovered:
     check: str
     clause: str
 
+    @property
+    def text(self) -> str:
+        """The check with its clause."""
+        return f"{self.check} ({self.clause})" if self.clause else self.check
+
 
 @dataclass(frozen=True, slots=True)
 class Calc:

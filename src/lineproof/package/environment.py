@@ -235,7 +235,6 @@ def _filters() -> dict[str, Any]:
         "table_heights": table_heights,
         "notation_heights": _notation_heights,
         "part_heights": _part_heights,
-        "covered_text": lambda item: f"{item.check} ({item.clause})" if item.clause else item.check,
     }
 
 

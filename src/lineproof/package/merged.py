@@ -16,12 +16,29 @@ Lines = tuple[tuple[str, str], ...]
 
 
 @dataclass(frozen=True, slots=True)
+class NotCoveredBy:
+    """What some calcs do not cover."""
+
+    calcs: str
+    not_covered: tuple[NotCovered, ...]
+
+
+@dataclass(frozen=True, slots=True)
 class ScopeBox:
-    """What is preliminary and not covered, with the calcs that it holds for."""
+    """What is preliminary, and what is not covered: by all its calcs, then by some of them."""
 
     calcs: str
     scope: str
-    not_covered: tuple[NotCovered, ...]
+    lists: tuple[NotCoveredBy, ...]
+
+    @property
+    def not_covered(self) -> str:
+        """Say what is not covered, a sentence for each list; "" if all is."""
+        return " ".join(self._sentence(each) for each in self.lists)
+
+    def _sentence(self, each: NotCoveredBy) -> str:
+        where = "" if each.calcs == self.calcs else f" in {each.calcs} only"
+        return f"Not covered yet{where}: {'; '.join(item.text for item in each.not_covered)}."
 
 
 @dataclass(frozen=True, slots=True)
@@ -40,22 +57,27 @@ class ToConfirm:
 
 def scopes(calcs: Iterable[Calc]) -> tuple[ScopeBox, ...]:
     """Return each scope once, with the calcs that share it."""
-    shared = _grouped(calcs, lambda calc: (calc.scope, calc.not_covered))
+    said = [calc for calc in calcs if calc.scope or calc.not_covered]
     return tuple(
-        ScopeBox(", ".join(calc.id for calc in group), scope, not_covered)
-        for (scope, not_covered), group in shared
-        if scope or not_covered
+        ScopeBox(_named(group), scope, uncovered(group))
+        for scope, group in _grouped(said, lambda calc: calc.scope)
     )
 
 
-def uncovered(calcs: Iterable[Calc]) -> tuple[ScopeBox, ...]:
-    """Return each list of what is not covered once, with the calcs that share it."""
-    shared = _grouped(calcs, lambda calc: calc.not_covered)
-    return tuple(
-        ScopeBox(", ".join(calc.id for calc in group), "", not_covered)
-        for not_covered, group in shared
-        if not_covered
-    )
+def uncovered(calcs: Iterable[Calc]) -> tuple[NotCoveredBy, ...]:
+    """Return what is not covered, each item once: first by all calcs, then by some of them."""
+    several = list(calcs)
+    items = dict.fromkeys(item for calc in several for item in calc.not_covered)
+    pairs = [(_named(c for c in several if item in c.not_covered), item) for item in items]
+    lists = [
+        NotCoveredBy(named, tuple(item for _, item in group))
+        for named, group in _grouped(pairs, lambda pair: pair[0])
+    ]
+    return tuple(sorted(lists, key=lambda each: each.calcs != _named(several)))
+
+
+def _named(calcs: Iterable[Calc]) -> str:
+    return ", ".join(calc.id for calc in calcs)
 
 
 def to_confirm(calcs: Iterable[Calc]) -> tuple[ToConfirm, ...]:

@@ -11,6 +11,7 @@ from lineproof.package.calc import Calc, NotCovered, PartBlock, ProseBlock
 from lineproof.package.facts import FINAL_STATUSES, ProjectFacts, project_facts
 from lineproof.package.files import file_name
 from lineproof.package.merged import (
+    NotCoveredBy,
     ScopeBox,
     ToConfirm,
     scopes,
@@ -82,8 +83,8 @@ class Package:
         return scopes(self.calcs)
 
     @property
-    def not_covered(self) -> tuple[ScopeBox, ...]:
-        """What is not covered yet, each list once."""
+    def not_covered(self) -> tuple[NotCoveredBy, ...]:
+        """What is not covered yet, each item once."""
         return uncovered(self.calcs)
 
     @property
