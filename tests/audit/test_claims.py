@@ -197,6 +197,7 @@ def test_bars_over_a_web_and_its_overhangs_are_whole_bars(tmp_path: Path) -> Non
     lines = {"A_s = (n_t + 2*n_o)*A_b": "mm2"}
     graph = Graph(sheet_of(lines, {"n_t": "2", "n_o": "1", "A_b": "300 mm2"}).close())
     assert read(graph, tmp_path, "id,claimed\nbeam/A_s,4-20M\n")[0].value == 1200.0
+    assert read(graph, tmp_path, "id,claimed\nbeam/A_s,4 20M\n")[0].value == 1200.0
 
 
 def test_bars_are_no_area_that_a_moment_requires(tmp_path: Path) -> None:
@@ -256,7 +257,7 @@ def test_odd_spelling_with_one_meaning_is_read(
         ("beam/d", "tbd", "holds no number; write for example '25 mm', or leave the cell empty"),
         ("beam/d", "21.2 inches", "not a unit of the list; write it in mm, cm, m, in, ft"),
         ("given/f_c", "30 kN/cm2", "not a unit of the list; write it in MPa, Pa, kPa"),
-        ("strength/M_r", "207 kN-m", "'kN-m' is not a unit of the list; write 'kN.m'"),
+        ("strength/M_r", "207 kN-mm2", "'kN-mm2' is not a unit of the list"),
         ("given/n_b", "4 bars", "has a unit, and this line has none; write '4'"),
         ("beam/d", "539 mm2", "'539 mm2' is an area, but a length is needed"),
     ],

@@ -103,7 +103,7 @@ def test_a_wrong_unit_is_refused_with_the_nearest_ones() -> None:
 @pytest.mark.parametrize(
     ("typed", "advice"),
     [
-        ("ft lb", "'lbf.ft'"), ("kip-ft", "'kip.ft'"), ("kN m", "'kN.m'"),
+        ("ft lb", "'lbf.ft'"), ("lb-ft", "'lbf.ft'"),
         ("furlong", "one such as 'mm', 'kN', 'kN.m' or 'MPa'"),
     ],
 )  # fmt: skip
@@ -113,9 +113,23 @@ def test_a_unit_in_other_words_is_refused_with_what_to_write(typed: str, advice:
     assert advice in str(caught.value).partition("; write ")[2]
 
 
+@pytest.mark.parametrize(
+    ("typed", "unit"),
+    [
+        ("kN-m", "kN.m"),
+        ("kN m", "kN.m"),
+        ("kip-ft", "kip.ft"),
+        ("N-mm", "N.mm"),
+        ("kN-m/m", "kN.m/m"),
+    ],
+)
+def test_a_hyphen_or_space_between_units_is_their_product(typed: str, unit: str) -> None:
+    assert unit_named(typed) is unit_named(unit)
+
+
 # These texts hang pint, crash it or are read as something else.
 HOSTILE = [
-    "9**9**9", "m**9**9**9", "*".join(["m"] * 3000), '__import__("os")', "kN-m", "m; s", "kn",
+    "9**9**9", "m**9**9**9", "*".join(["m"] * 3000), '__import__("os")', "kN--m", "m; s", "kn",
     "me", "fc", "cd", "m" * 10_000, "mm\nm", "mm\x00", "{}", "%s", "(" * 5000, "mm²²", "ｍｍ",
     "\ud800",
 ]  # fmt: skip

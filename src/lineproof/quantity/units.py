@@ -141,6 +141,9 @@ _EXAMPLES = "one such as 'mm', 'kN', 'kN.m' or 'MPa'"
 _PLAIN = str.maketrans("·⋅∙•×*²³⁴", "......234")
 """Dots and crosses between units, raised digits."""
 
+_BETWEEN_UNITS = re.compile(r"(?<=[A-Za-z])[- ](?=[a-z])")
+"""A hyphen or a space between two units, which stands for their product."""
+
 METRE_SYSTEM = {
     "length": "m", "area": "m2", "volume": "m3", "moment of inertia": "m4", "force": "kN",
     "moment": "kN.m", "load per length": "kN/m", "stress or pressure": "kPa",
@@ -153,11 +156,13 @@ METRE_SYSTEM = {
 def plain_spelling(text: str) -> str:
     """Return the closed list's way to write a unit.
 
-    >>> plain_spelling("kN·m"), plain_spelling("kN⋅m"), plain_spelling("N/mm²")
+    >>> plain_spelling("kN·m"), plain_spelling("kN-m"), plain_spelling("N/mm²")
     ('kN.m', 'kN.m', 'MPa')
     """
     tidy = text.strip()
     tidy = tidy.translate(_PLAIN).replace("^", "")
+    product = _BETWEEN_UNITS.sub(".", tidy)
+    tidy = product if product in UNITS else tidy
     return _SAME_UNIT.get(tidy, tidy)
 
 

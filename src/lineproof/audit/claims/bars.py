@@ -16,7 +16,7 @@ from lineproof.record.entry import GIVEN
 from lineproof.standards.a23_3.bars import BARS
 from lineproof.typeset.values import told
 
-_GROUP = re.compile(r"(\d{1,3}) ?[-–x×] ?(\d{2}M)\Z", re.ASCII | re.IGNORECASE)
+_GROUP = re.compile(r"(\d{1,3})(?: ?[-–x×] ?| )(\d{2}M)\Z", re.ASCII | re.IGNORECASE)
 _BETWEEN = re.compile(r" ?(?:[+/]|\band\b) ?")
 _GIVEN_AREAS = ("A_s", "A_sp")
 """Areas of bars that a calculation of a section may take as given: in tension, in compression."""
@@ -25,7 +25,7 @@ _GIVEN_AREAS = ("A_s", "A_sp")
 def bars_in(text: str) -> tuple[tuple[int, str], ...]:
     """Return number and size of the bars that a text names; empty where it names none.
 
-    >>> bars_in("4-20M"), bars_in("2 x 25m + 2-20M"), bars_in("1200 mm2")
+    >>> bars_in("4 20M"), bars_in("2 x 25m + 2-20M"), bars_in("1200 mm2")
     (((4, '20M'),), ((2, '25M'), (2, '20M')), ())
     """
     found = [_GROUP.match(group) for group in _BETWEEN.split(text)]
