@@ -29,6 +29,10 @@ def checked(*zones: Any, basis: ShearBasis = BASIS) -> Choice:
     ("zone", "said"),
     [
         ({"span": 1, "spacing": "80 mm"}, "leaves 69 mm between 10M stirrups, less than the 75 mm"),
+        (
+            {"span": 1, "spacing": "150 m"},
+            "'150 m' is more than 2000 mm; write for example '200 mm'",
+        ),
         ({"span": 1}, "no spacing; write for example 'spacing': '200 mm'"),
         ({"span": 4, "spacing": "200 mm"}, "span '4' does not exist; write one of 1, 2, 3"),
         ({"span": 1, "from": "0 mm", "to": "9 m", "spacing": "200 mm"}, "not inside the clear"),

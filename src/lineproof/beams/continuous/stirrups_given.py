@@ -24,6 +24,8 @@ from lineproof.standards.a23_3.bars import BARS
 
 _KEYS = ("span", "from", "to", "spacing")
 _NEAR = 1e-6
+_WIDEST = 2000.0
+"""Stirrups farther apart than this [mm] are a slip of units; a stretch without any is left out."""
 _EXAMPLE = "{'span': 1, 'from': '0 mm', 'to': '1200 mm', 'spacing': '150 mm'}"
 
 
@@ -188,6 +190,11 @@ def _check_spacing(
 ) -> None:
     if row.get("spacing") is None:
         faults.add(f"{name}: no spacing; write for example 'spacing': '200 mm'")
+    elif s > _WIDEST:
+        faults.add(
+            f"{name}: {echo(row['spacing'])} is more than {_WIDEST:g} mm; write for example "
+            "'200 mm', and leave out a stretch without stirrups"
+        )
     elif s - basis.d_bs < CLEAR_FOR_PLACING:
         faults.add(
             f"{name}: {echo(row['spacing'])} leaves {s - basis.d_bs:.0f} mm between "
