@@ -83,8 +83,9 @@ def read_in_range(name: str, given: QuantityInput, allowed: Range, why: str = ""
         )
     if not low <= value <= high:
         raise UserError(
-            f"{name}: {echo(given)} is outside {_plain(allowed.low)} to {_plain(allowed.high)} "
-            f"{allowed.unit}{why or ', the range of the method'}; write a value inside it"
+            f"{name}: {echo(given)} is outside {_plain(allowed.low)} to "
+            f"{f'{_plain(allowed.high)} {allowed.unit}'.strip()}"
+            f"{why or ', the range of the method'}; write a value inside it"
         )
     return typed
 

@@ -222,7 +222,7 @@ def test_redistribution_of_some_cases_leaves_the_others() -> None:
 @pytest.mark.parametrize(
     ("reductions", "limits", "words"),
     [
-        ({2: 25.0}, {2: 20.0}, "25 % is more than the limit of 20 %"),
+        ({2: 25.0}, {2: 20.0}, "25 % is more than the limit of 20 %; write at most that"),
         ({2: 10.0}, {2: 25.0}, "limit 25 % is outside 0 to 20 %"),
         ({2: 10.0}, {}, "no limit given"),
         ({1: 10.0}, {1: 20.0}, "the end is simple and carries no moment"),

@@ -102,7 +102,9 @@ def check_reductions(
         elif not 0 <= limit <= MOST:
             faults.add(f"{name}: limit {limit:g} % is outside 0 to {MOST:g} %")
         elif not abs(percent) <= limit:
-            faults.add(f"{name}: {percent:g} % is more than the limit of {limit:g} %")
+            faults.add(
+                f"{name}: {percent:g} % is more than the limit of {limit:g} %; write at most that"
+            )
     faults.raise_if_any()
 
 
