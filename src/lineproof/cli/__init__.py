@@ -38,6 +38,7 @@ def parser() -> argparse.ArgumentParser:
     commands = made.add_subparsers(dest="command", metavar="COMMAND", required=True)
     _add_issue(commands)
     _add_recheck(commands)
+    _add_compare(commands)
     _add_lines(commands)
     _add_audit(commands)
     _add_verify(commands)
@@ -78,6 +79,19 @@ def _add_recheck(commands: _Commands[argparse.ArgumentParser]) -> None:
         "Nothing is changed. Exit code 1 when a line differs or a check does not hold.",
     )
     recheck.add_argument("notebooks", nargs="+", type=Path, metavar="CALC.ipynb")
+
+
+def _add_compare(commands: _Commands[argparse.ArgumentParser]) -> None:
+    made = commands.add_parser(
+        "compare",
+        help="say what changed from one issue of a calc to the next; runs nothing",
+        description="Name the inputs, choices and verdicts that changed from one issue of a calc "
+        "to the next, with both values. Nothing in the files is run. Exit code 1 when a line "
+        "differs.",
+    )
+    made.add_argument("old", type=Path, metavar="OLD", help="notebook, PDF, HTML or record")
+    made.add_argument("new", type=Path, metavar="NEW", help="the later issue, of any such kind")
+    made.add_argument("--all", action="store_true", help="name every line that differs")
 
 
 def _add_lines(commands: _Commands[argparse.ArgumentParser]) -> None:
