@@ -282,6 +282,16 @@ def test_bars_beside_those_of_the_section_run_into_their_support() -> None:
     assert recompute(sheet.close()) == []
 
 
+def test_a_simple_support_without_bottom_bars_fails_by_its_own_rule() -> None:
+    """The bars begin 0.5 m inside the face: a third of the steel is asked for at the wall, none is.
+
+    A third of 4-20M is 400 mm2 (12.11.1); a quarter would be the rule of a continuous support.
+    """
+    _, sheet = built([row("bottom", "4-20M", 0.65, 12.1), OVER, *BESIDE])
+    left, right = sheet.entries_of("anchorage-bottom-1-left")["bars-into-support"].value
+    assert (left, right) == (pytest.approx(400), 0.0)
+
+
 def test_a_support_without_top_bars_is_not_given_any() -> None:
     """What does not stand is not chosen: no resistance, no bars in the table of the summary."""
     beam, sheet = built([row("bottom", "4-20M", -0.1, 12.1), *BESIDE], cures=True)

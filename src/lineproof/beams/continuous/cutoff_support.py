@@ -78,16 +78,17 @@ def record_into_support(site: Site) -> None:
         return
     sheet = site.writers.sheet
     simple = designed.exterior(support) and designed.outline.supports[support - 1].kind == "simple"
+    enough = clause.INTO_SIMPLE_SUPPORT if simple else clause.INTO_CONTINUOUS_SUPPORT
     with sheet.part(site.key, f"{site.title} into support {support}"):
         sheet.note("bars-text", f"Into the support: {text_of(side.kept) or 'none'}.", title="Bars")
         if not side.kept:
             none = sheet.given("A_se", "0 mm2", source="as laid")
-            sheet.check(clause.INTO_CONTINUOUS_SUPPORT, A_se=none, A_s=site.section["A_s"])
+            sheet.check(enough, A_se=none, A_s=site.section["A_s"])
             return
         steps = begin(site.writers, sheet, side.span, "bottom")
         A_se = record_area(steps, grouped(site.writers, side.kept), "A_se", depth=False)
         steps.bind(A_s=site.section["A_s"], A_se=A_se)
-        steps.check(clause.INTO_SIMPLE_SUPPORT if simple else clause.INTO_CONTINUOUS_SUPPORT)
+        steps.check(enough)
         if side.t_kept < -half_of(designed, side.span, side.near):
             sheet.note("through", "The bars run through the support.", title="End of the bars")
             return
