@@ -43,7 +43,6 @@ _CASE_COLUMNS = [
     "Combination", "Case", "M, largest, kN.m", "At", "M, smallest, kN.m", "At",
     "V, largest size, kN", "At",
 ]  # fmt: skip
-_NAME_COLUMNS = ["Combinations", "Cases", "Number of cases"]
 REACTIONS_TITLE = "Largest and smallest reactions of the imported cases, factored as in the file"
 _REACTION_COLUMNS = ["Support", "R, largest, kN", "Case", "R, smallest, kN", "Case"]
 NOT_COVERED = (
@@ -89,10 +88,6 @@ def record_imported_analysis(model: Model) -> None:
         sheet.note("between", _BETWEEN, title="Between the stations", clause="statics")
         sheet.note("checked", _checked_text(model, file), title="Checked before use")
         _record_closing(model, forces)
-        sheet.table(
-            "imported-combinations", _NAME_COLUMNS, _combination_rows(file),
-            title="Cases of the file in its combinations; those with the same cases stand together",
-        )  # fmt: skip
         rows = list(_case_rows(forces))
         sheet.table(
             "imported-cases", _CASE_COLUMNS, rows,
@@ -220,24 +215,6 @@ def _record_closing(model: Model, forces: ImportedForces) -> None:
     )  # fmt: skip
     bound: dict[str, Any] = dict(steps.place) | largest
     model.sheet.check(test, **bound)
-
-
-def _combination_rows(file: ForcesFile) -> list[list[str]]:
-    """Name every case of the file: combinations with the same cases share a row.
-
-    A case that one of them lacks leaves that one in a row of its own, where it can be seen: no
-    rule tells that it was forgotten.
-    """
-    cases: dict[str, list[str]] = {}
-    for case in file.imported.envelope.cases:
-        cases.setdefault(case.combination, []).append(case.arrangement)
-    alike: dict[tuple[str, ...], list[str]] = {}
-    for combination, names in cases.items():
-        alike.setdefault(tuple(sorted(names)), []).append(combination)
-    return [
-        ["; ".join(combinations), "; ".join(names), str(len(names))]
-        for names, combinations in alike.items()
-    ]
 
 
 def _case_rows(forces: ImportedForces) -> Iterator[list[str]]:
