@@ -482,3 +482,25 @@ def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) 
     assert entries["W_f1"].value == pytest.approx(84e3)
     assert entries["W_d1"].value == pytest.approx(334.51e3, abs=10)
     assert check.value == pytest.approx((0.9 * 334.51e3, 84e3), abs=10)
+
+
+def test_a_case_left_out_of_a_combination_shows_in_the_table(tmp_path: Path) -> None:
+    """West is missing in 0.9D + 1.4W, which shares east with the other; 1.4D shares none."""
+    cases = [("1.4D", "all")]
+    cases += [("1.25D + 1.4W", "east"), ("1.25D + 1.4W", "west"), ("0.9D + 1.4W", "east")]
+    rows = [
+        f"1,{x / 2},{case},{combination},{42 * x / 2 - 6 * (x / 2) ** 2},{42 - 6 * x}"
+        for combination, case in cases
+        for x in range(15)
+    ]
+    header = "span,station (m),case,combination,M (kN.m),V (kN)"
+    entries = analysed(
+        spans=["7 m"], supports=["column 450 mm"] * 2,
+        forces_csv=frame_files.write(tmp_path / "frame.csv", rows, header),
+    ).sheet.entries_of("analysis")  # fmt: skip
+
+    assert entries["imported-combinations"].source.content["rows"] == [
+        ["1.4D", "all", "–"],
+        ["1.25D + 1.4W", "east; west", "–"],
+        ["0.9D + 1.4W", "east", "west"],
+    ]

@@ -44,6 +44,7 @@ _CASE_COLUMNS = [
     "V, largest size, kN", "At",
 ]  # fmt: skip
 REACTIONS_TITLE = "Largest and smallest reactions of the imported cases, factored as in the file"
+_COMBINATION_COLUMNS = ["Combination", "Cases", "Not in it, but in others that share a case"]
 _REACTION_COLUMNS = ["Support", "R, largest, kN", "Case", "R, smallest, kN", "Case"]
 NOT_COVERED = (
     {"check": "Deflections: the imported moments are not known by load type", "clause": "9.8"},
@@ -92,6 +93,10 @@ def record_imported_analysis(model: Model) -> None:
         sheet.table(
             "imported-cases", _CASE_COLUMNS, rows,
             title="Imported load cases with the largest or smallest moment or shear of a station",
+        )  # fmt: skip
+        sheet.table(
+            "imported-combinations", _COMBINATION_COLUMNS, list(_combination_rows(forces)),
+            title="Imported combinations with their cases",
         )  # fmt: skip
         columns, reactions = imported_reactions(model)
         sheet.table("imported-reactions", columns, reactions, title=REACTIONS_TITLE)
@@ -215,6 +220,17 @@ def _record_closing(model: Model, forces: ImportedForces) -> None:
     )  # fmt: skip
     bound: dict[str, Any] = dict(steps.place) | largest
     model.sheet.check(test, **bound)
+
+
+def _combination_rows(forces: ImportedForces) -> Iterator[list[str]]:
+    """Give the combinations with their cases, and the cases that may have been left out."""
+    cases: dict[str, dict[str, None]] = {}
+    for case in forces.cases:
+        cases.setdefault(case.combination, {})[case.arrangement] = None
+    for combination, own in cases.items():
+        alike = (each for each in cases.values() if each.keys() & own.keys())
+        absent = {name: None for each in alike for name in each if name not in own}
+        yield [combination, "; ".join(own), "; ".join(absent) or "–"]
 
 
 def _case_rows(forces: ImportedForces) -> Iterator[list[str]]:
