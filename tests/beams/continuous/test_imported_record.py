@@ -484,6 +484,22 @@ def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) 
     assert check.value == pytest.approx((0.9 * 334.51e3, 84e3), abs=10)
 
 
+def test_a_file_with_both_signs_turned_fails_and_is_told(tmp_path: Path) -> None:
+    """M = 6*x**2 - 42*x with V = 12*x - 42 closes by statics, but its load of 84 kN acts upward."""
+    rows = [
+        f"1,{x / 2},all,1.25D+1.5L,{6 * (x / 2) ** 2 - 42 * x / 2},{6 * x - 42}" for x in range(15)
+    ]
+    header = "span,station (m),case,combination,M (kN.m),V (kN)"
+    check = analysed(
+        spans=["7 m"], supports=["column 450 mm"] * 2,
+        forces_csv=frame_files.write(tmp_path / "frame.csv", rows, header),
+    ).sheet.entries_of("analysis")["imported-load-1"]  # fmt: skip
+
+    assert not check
+    assert check.value[1] == pytest.approx(-84e3)
+    assert "both M and V have the wrong sign" in check.source.no
+
+
 def test_a_case_left_out_of_a_combination_shows_in_the_table(tmp_path: Path) -> None:
     """West is missing in 0.9D + 1.4W, which shares east with the other; 1.4D shares none."""
     cases = [("1.4D", "all")]
