@@ -300,3 +300,11 @@ def test_reactions_are_the_jumps_of_the_shear() -> None:
 )
 def test_wrong_reactions_are_named(change: Callable[[list[str]], list[str]], words: str) -> None:
     assert any(words in fault for fault in faults(lambda: reactions(change(reaction_rows()))))
+
+
+def test_a_case_that_stands_twice_as_a_whole_is_told_once_a_span() -> None:
+    """Not as a fault of each of its stations, and of each that the other cases have once."""
+    again = [line for line in rows() if ",1.4D," in line]
+    found = faults(lambda: forces([*rows(), *again]))
+    assert len(found) == len(LENGTHS)
+    assert all("1.4D, all, span" in f and "all stations stand twice" in f for f in found)

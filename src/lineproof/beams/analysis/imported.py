@@ -15,7 +15,7 @@ over its support.
 from __future__ import annotations
 
 import math
-from collections import defaultdict
+from collections import Counter, defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
@@ -100,6 +100,8 @@ def read_forces(
     faults = FileFaults(name)
     table = _table(read_table(source, name, FORCES), lengths, faults)
     faults.raise_if_any()
+    _check_once(table, faults)
+    faults.raise_if_any()
     known = breaks or {}
     largest = _largest(table)
     for case, spans in table.items():
@@ -136,6 +138,19 @@ def _table(lines: Sequence[Line], lengths: Sequence[float], faults: FileFaults) 
         for rows in spans.values():
             rows.sort(key=lambda row: row.x)
     return table
+
+
+def _check_once(table: Table, faults: ManyFaults) -> None:
+    """Find cases that stand twice as a whole: every station of a span, its ends included."""
+    for case, spans in table.items():
+        for number, rows in spans.items():
+            counts = Counter(row.x for row in rows)
+            if min(counts.values()) > 1:
+                lines = sorted(row.line for row in rows)
+                faults.add(
+                    f"{case}, span {number}: all stations stand twice (lines {lines[0]} to "
+                    f"{lines[-1]}); write every case once, or give the second another name"
+                )
 
 
 def _check_stations(
