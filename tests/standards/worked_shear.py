@@ -363,6 +363,11 @@ INTERFACE = (
         {**S, "n_o": 3, "A_b": 200, "M_f": 160, "M_r": 150},
         "0.85*3*200*0.4*1 = 204",
     ),
+    W(
+        "interface.OVERHANG_TENSION_IN_PART",
+        {**S, "n_o": 3, "A_b": 200, "M_f": 90, "M_r": 150, "l_av": 350, "l_d": 700},
+        "0.85*3*200*0.5*0.4*90/150 = 61.2",
+    ),
     W("interface.LENGTH", {"x_vz": 200, "x_vm": 3144}, "max(200 - 3144, 3144 - 200)/1000 = 2.944"),
     W(
         "interface.LENGTH_RESTRAINED",

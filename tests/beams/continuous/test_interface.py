@@ -60,7 +60,7 @@ def test_block_in_the_web_and_bars_in_the_overhang() -> None:
     with sheet.part("interface-top-3", "Hogging"):
         steps = place(sheet, n_o="3", h_f="100 mm", l_vf="1.5 m", M_f="96 kN.m", M_r="160 kN.m")
         steps.bind(A_b=sheet.given("A_bt", "200 mm2"))
-        record_interface_top(steps, slab)
+        record_interface_top(steps, slab, in_part=False)
     made = sheet.close()
     assert number(made, "interface-1/F_o") == pytest.approx(544.3, abs=1)
     assert number(made, "interface-top-3/F_o") == pytest.approx(122.4, abs=0.5)
@@ -75,7 +75,7 @@ def test_closer_slab_bars_are_told_as_a_cure() -> None:
     with sheet.part("interface-top", "Hogging"):
         steps = place(sheet, n_o="3", h_f="100 mm", l_vf="1 m", M_f="90 kN.m", M_r="90 kN.m")
         steps.bind(A_b=sheet.given("A_bt", "200 mm2"))
-        record_interface_top(steps, SlabBars(1, "10M", 400.0))
+        record_interface_top(steps, SlabBars(1, "10M", 400.0), in_part=False)
     check = sheet.entry("interface-top/interface-shear")
     assert not check
     assert cures_of(check)[0].text == "these slab bars across the web at 250 mm or less"

@@ -127,3 +127,21 @@ def test_top_bars_of_a_girder_are_chosen_with_the_shear_of_the_restraint() -> No
     _, (needed, there) = beam.design.stirrups.checks[0].bar_areas()
     assert needed[:, 0].max() == pytest.approx(1017.5, abs=0.2)
     assert there[0, 0] == pytest.approx(1200)
+
+
+def test_overhang_bars_developed_in_part_push_on_the_flange_in_part() -> None:
+    """A fixed wall of 400 mm: the hook in the overhang stands 350 mm behind the face, untied.
+
+    30M: l_hb = 100*29.9/sqrt(32) = 528.56 mm, without the factor of ties: 350/528.6 = 0.662 of the
+    bar of 700 mm2 counts, in M_r as in F_o = 0.85*0.662*700*400*M_f/M_r = 157.6 kN*M_f/M_r.
+    """
+    beam = analysed(
+        supports=["wall 400 mm, fixed", *["column 450 mm"] * 2, "wall 400 mm, fixed"],
+        top_bars=["4-30M", "4-30M", "4-30M", "4-30M"], slab_bars="2 x 15M at 150 mm",
+    )  # fmt: skip
+    run(beam, ("flexure", "shear"))
+    hog, held = (beam.sheet.entries_of(f"{key}hog-1-right") for key in ("", "interface-"))
+    assert hog["n_o"].value == 1
+    F_o = 157.6e3 * hog["M_f"].value / hog["M_r"].value
+    assert held["F_o"].value == pytest.approx(F_o, rel=1e-3)
+    assert not list(faults(record_so_far(beam).data))

@@ -224,9 +224,18 @@ def _needed_length(rise: float) -> float:
 
 
 def _record_part(steps: Steps, A_s: Entry, short: Developed, mark: str, where: str) -> Entry:
-    """Record the area of bars that are developed in part, from a place to their nearer end.
+    """Record the area of bars that are developed in part, from a place to their nearer end."""
+    l_av, l_d = record_lengths(steps, short, where, mark)
+    return steps.line(development.DEVELOPED_AREA, f"A_sd{mark}", A_s=A_s, l_av=l_av, l_d=l_d)
 
-    The lengths are rounded to 0.1 mm, to the safe side, so that the line is followed by hand.
+
+def record_lengths(
+    steps: Steps, short: Developed, where: str, mark: str = ""
+) -> tuple[Entry, Entry]:
+    """Record how far bars reach from a place to their nearer end, and the length they need.
+
+    The lengths are rounded to 0.1 mm, to the safe side, so that lines with them are followed by
+    hand.
     """
     given = steps.sheet.given
     l_av = given(
@@ -237,4 +246,4 @@ def _record_part(steps: Steps, A_s: Entry, short: Developed, mark: str, where: s
         f"l_d{mark}", plain(_needed_length(short.rise), "mm"), "length needed",
         source="anchorage, the same bars",
     )  # fmt: skip
-    return steps.line(development.DEVELOPED_AREA, f"A_sd{mark}", A_s=A_s, l_av=l_av, l_d=l_d)
+    return l_av, l_d

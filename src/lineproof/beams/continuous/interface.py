@@ -150,14 +150,15 @@ def record_interface(steps: Steps, slab: SlabBars, *, block_in_web: bool) -> Non
     _record_plane(steps, slab)
 
 
-def record_interface_top(steps: Steps, slab: SlabBars) -> None:
+def record_interface_top(steps: Steps, slab: SlabBars, *, in_part: bool) -> None:
     """Record inside the open part the same for top bars that lie in the overhang.
 
     Their tension follows the moment of the section, which is that of all its bars at yield at M_r;
     below it the lever arm is longer, so that they take less than their share. Needs n_o, ``A_b`` of
-    the top bars, M_f, M_r, h_f and l_vf in place.
+    the top bars, M_f, M_r, h_f and l_vf in place; l_av and l_d where those in the overhang count
+    ``in_part`` at the face, as they do in M_r.
     """
-    steps.line(interface.OVERHANG_TENSION)
+    steps.line(interface.OVERHANG_TENSION_IN_PART if in_part else interface.OVERHANG_TENSION)
     _record_plane(steps, slab)
 
 

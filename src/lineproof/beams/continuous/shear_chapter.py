@@ -12,7 +12,7 @@ from lineproof.beams.continuous.bearing import (
 )
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.developed import bars_of
+from lineproof.beams.continuous.developed import Developed, bars_of, record_lengths
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
 from lineproof.beams.continuous.faces import faces_of, has_sag, hogging, restrained_supports
 from lineproof.beams.continuous.geometry import span_place
@@ -233,7 +233,18 @@ def _record_interfaces(design: Design) -> None:
             steps.bind(n_o=held["n_o"], A_b=held.get("A_bo", held["A_b"]))
             steps.bind(M_f=held["M_f"], M_r=held["M_r"])
             _record_to_inflection(steps, model, face)
-            record_interface_top(steps, slab)
+            short = _overhang_in_part(design, face)
+            if short is not None:
+                l_av, l_d = record_lengths(steps, short, "the face")
+                steps.bind(l_av=l_av, l_d=l_d)
+            record_interface_top(steps, slab, in_part=short is not None)
+
+
+def _overhang_in_part(design: Design, face: FaceOfSupport) -> Developed | None:
+    """Return the top bars of the overhang with most of their area, if that counts in part only."""
+    counted = [each for each in design.top_counted(face) if each.run.place == "overhang"]
+    most = max(counted, key=lambda each: each.part, default=None)
+    return None if most is None or most.whole else most
 
 
 def _flange_steps(sheet: Sheet, model: Model, span: int) -> Steps:

@@ -102,6 +102,12 @@ OVERHANG_TENSION = _formula(
     title="Tension in one overhang by the top bars in it, with the moment, at most at yield",
     basis=MECHANICS,
 )
+OVERHANG_TENSION_IN_PART = _formula(
+    "F_o = phi_s*n_o*A_b*min(l_av/l_d, 1)*f_y*min(M_f/M_r, 1)",
+    clause="11.5",
+    title="Tension in one overhang by the top bars in it, as far as developed, with the moment",
+    basis=MECHANICS,
+)
 LENGTH = _formula(
     "l_vf = abs(x_vz - x_vm)",
     clause="11.5",
@@ -148,6 +154,7 @@ FORMULAS = (
     OVERHANG_IN_FLANGE,
     OVERHANG_BLOCK_IN_WEB,
     OVERHANG_TENSION,
+    OVERHANG_TENSION_IN_PART,
     LENGTH,
     LENGTH_RESTRAINED,
     LENGTH_QUARTER,
