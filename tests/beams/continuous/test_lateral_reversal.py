@@ -75,3 +75,22 @@ def test_bottom_bars_run_through_where_sway_turns_the_moment(tmp_path: Path) -> 
             if run.start < face < run.end
         )  # fmt: skip
         assert held >= 1285.0
+
+
+def test_bottom_bars_hold_torsion_where_sway_lifts_an_end(tmp_path: Path) -> None:
+    """The end support pulls the beam down: its section of shear is the face, bottom in tension.
+
+    Bars that end straight there were laid without the torsion, and failed their own check.
+    """
+    path = Path(_frame(tmp_path / "f"))
+    head, *rows = path.read_text(encoding="utf-8").splitlines()
+    turned = [f"{head},T (kN.m)"]
+    for row in rows:
+        x = float(row.split(",")[1])
+        turned.append(f"{row},{8 * (3.8 - x):.4f}")
+    path.write_text("\n".join(turned) + "\n", encoding="utf-8")
+    beam = start(
+        spans=["7.6 m", "7.6 m"], supports=["column 450 mm"] * 3, forces_csv=str(path),
+        closed_stirrups=True, torsion="equilibrium", shape="L", tributary_width="1.7 m",
+    )  # fmt: skip
+    assert failing(run(beam)) == []

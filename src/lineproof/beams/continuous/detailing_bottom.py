@@ -33,7 +33,6 @@ from lineproof.beams.continuous.cutoff import (
     continuing_length,
     extension,
     floor50,
-    full_area,
     full_moment,
     half_of,
     least_step,
@@ -45,7 +44,7 @@ from lineproof.beams.continuous.cutoff import (
     zones_at,
 )
 from lineproof.beams.continuous.detailing_data import Designed
-from lineproof.beams.continuous.detailing_through import run_through
+from lineproof.beams.continuous.detailing_through import going_past, run_through
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.laps import lap_between, split
 from lineproof.beams.continuous.layout import BarRun, Hook
@@ -130,7 +129,7 @@ def _lay_span(frame: Frame, span: int) -> tuple[BarRun, ...]:
     groups = groups_of(designed.bars.bottom[span - 1])
     groups = tuple(replace(run, serves=f"span {span}") for run in groups)
     ends = {near: _anchored(designed, span, near, groups) for near in SIDES}
-    past = {near: _going_past(designed, span, near, groups) for near in SIDES}
+    past = {near: going_past(designed, span, near, groups) for near in SIDES}
     runs = list(groups)
     for near in SIDES:
         t = support_end(designed, span, near)
@@ -143,30 +142,6 @@ def _lay_span(frame: Frame, span: int) -> tuple[BarRun, ...]:
     for near in SIDES:
         runs = _cut_side(frame, span, near, runs, max(ends[near].running_in, past[near]))
     return tuple(runs)
-
-
-def _going_past(designed: Designed, span: int, near: End, groups: Sequence[BarRun]) -> int:
-    """Return how many groups beside the corners go past an interior support, to be developed there.
-
-    As few as carry the bottom tension from its face to its axis: where lateral loads turn the
-    moment at a support, bars that end in it do not. None where the soffit steps.
-    """
-    support = support_of(span, near)
-    depths = designed.outline.depths
-    beside = span - 1 if near == "left" else span + 1
-    if not designed.held(support) or designed.exterior(support):
-        return 0
-    if depths[span - 1] != depths[beside - 1]:
-        return 0
-    places = local(designed, span, near, np.array([0.0, half_of(designed, span, near)]))
-    side = demand_at(designed, span, places).bottom
-    M, F = float(side.M.max()) / MARGIN, float(side.F.max()) / MARGIN
-    for number in range(len(groups)):
-        going = groups[: number + 1]
-        F_r = full_area(designed, going)[0] * yield_force(designed)
-        if F_r >= F and full_moment(designed, "bottom", span, going) >= M:
-            return number
-    return len(groups) - 1
 
 
 def support_end(designed: Designed, span: int, near: End) -> float:
@@ -253,7 +228,23 @@ def _held(
 def face_tension(designed: Designed, span: int, near: End) -> float:
     """Return the tension of the bottom bars at the face of an end support [N]."""
     at = face_demand(designed, span, near)
-    return max(float(at.bottom.F[0]), end_tension(designed, support_of(span, near)))
+    return max(
+        float(at.bottom.F[0]), end_tension(designed, support_of(span, near)),
+        _turned_at_face(designed, span, near),
+    )  # fmt: skip
+
+
+def _turned_at_face(designed: Designed, span: int, near: End) -> float:
+    """Return the tension with torsion of the cases whose section of shear is the face itself [N].
+
+    So it is where the support pulls the beam down, and the bottom may be in tension there.
+    """
+    turned = designed.torsion.get(span)
+    if turned is None:
+        return 0.0
+    face = local(designed, span, near, half_of(designed, span, near))
+    here = np.abs(turned.sections - face) < 1.0
+    return float(turned.by_case[0].max(initial=0.0, where=here))
 
 
 def face_demand(designed: Designed, span: int, near: End) -> SpanDemand:

@@ -5,7 +5,21 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import replace
 
+import numpy as np
+
+from lineproof.beams.continuous.cutoff import (
+    MARGIN,
+    full_area,
+    full_moment,
+    half_of,
+    local,
+    support_of,
+)
+from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.resistance import yield_force
+from lineproof.beams.continuous.resistance_demand import demand_at
 
 
 def run_through(
@@ -47,3 +61,27 @@ def _one(first: BarRun, second: BarRun, number: int, serves: str) -> BarRun:
         first, number=number, start=left.start, hook_start=left.hook_start, end=right.end,
         hook_end=right.hook_end, serves=serves,
     )  # fmt: skip
+
+
+def going_past(designed: Designed, span: int, near: End, groups: Sequence[BarRun]) -> int:
+    """Return how many groups beside the corners go past an interior support, to be developed there.
+
+    As few as carry the bottom tension from its face to its axis: where lateral loads turn the
+    moment at a support, bars that end in it do not. None where the soffit steps.
+    """
+    support = support_of(span, near)
+    depths = designed.outline.depths
+    beside = span - 1 if near == "left" else span + 1
+    if not designed.held(support) or designed.exterior(support):
+        return 0
+    if depths[span - 1] != depths[beside - 1]:
+        return 0
+    places = local(designed, span, near, np.array([0.0, half_of(designed, span, near)]))
+    side = demand_at(designed, span, places).bottom
+    M, F = float(side.M.max()) / MARGIN, float(side.F.max()) / MARGIN
+    for number in range(len(groups)):
+        going = groups[: number + 1]
+        F_r = full_area(designed, going)[0] * yield_force(designed)
+        if F_r >= F and full_moment(designed, "bottom", span, going) >= M:
+            return number
+    return len(groups) - 1
