@@ -102,6 +102,12 @@ def test_another_exception_is_named_in_one_line(unrun: Notebook, tmp_path: Path)
     assert fault == "beam.ipynb: cell 7 (1/0): ZeroDivisionError: division by zero"
 
 
+def test_a_slip_of_the_pen_is_named_by_its_line(unrun: Notebook, tmp_path: Path) -> None:
+    """Python adds the name of a file, which a cell has not."""
+    (fault,) = faults_of(with_code(unrun, "a = 1\nb = )"), tmp_path)
+    assert fault == "beam.ipynb: cell 7 (a = 1): SyntaxError: unmatched ')' (line 2)"
+
+
 def test_a_deleted_input_is_told_with_what_to_do(unrun: Notebook, tmp_path: Path) -> None:
     unrun["cells"][2]["source"] = 'A_s = "2500 mm2"'
     (fault,) = faults_of(unrun, tmp_path)

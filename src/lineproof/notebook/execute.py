@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+import re
 import tempfile
 from collections.abc import Callable, Mapping
 from pathlib import Path
@@ -14,6 +15,8 @@ from lineproof.notebook.light_import import without_grammars
 
 _LANGUAGE = {"file_extension": ".py", "mimetype": "text/x-python", "name": "python"}
 _KERNEL = {"display_name": "Python 3 (ipykernel)", "language": "python", "name": "python3"}
+_CELL_FILE = re.compile(r"\(\d+\.py, (?=line \d+\)\Z)")
+"""The name that Jupyter gives a cell in the message of a SyntaxError; it says nothing to anyone."""
 _TIMINGS = ("execution", "ExecuteTime", "papermill")
 
 Progress = Callable[[int, int], None]
@@ -187,6 +190,6 @@ def _said(output: Mapping[str, Any]) -> list[str]:
     if lines and all(line.startswith(SHOWN_PREFIX) for line in lines):
         return [line.removeprefix(SHOWN_PREFIX) for line in lines]
     kind, value = str(output.get("ename", "")), str(output.get("evalue", "")).strip().splitlines()
-    told = ": ".join(filter(None, [kind, value[-1] if value else ""]))
+    told = ": ".join(filter(None, [kind, _CELL_FILE.sub("(", value[-1]) if value else ""]))
     # The usual cause is a line of the inputs that was deleted or misspelled.
     return [f"{told}; give it in a cell above this one" if kind == "NameError" else told]
