@@ -140,7 +140,7 @@ def _table(lines: Sequence[Line], lengths: Sequence[float], faults: FileFaults) 
     return table
 
 
-def _check_once(table: Table, faults: ManyFaults) -> None:
+def _check_once(table: Table, faults: FileFaults) -> None:
     """Find cases that stand twice as a whole: every station of a span, its ends included."""
     for case, spans in table.items():
         for number, rows in spans.items():
