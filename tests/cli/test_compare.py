@@ -57,6 +57,16 @@ def test_what_changed_is_told_with_both_values(issues: tuple[str, str], capsys: 
     ]
 
 
+def test_two_issues_of_one_letter_are_told_apart(tmp_path: Path, capsys: Capture) -> None:
+    """Both say revision A, of 110 and of 115 kN.m: on paper nobody could tell which is which."""
+    for moment in ("110 kN.m", "115 kN.m"):
+        text = record(moment=moment).to_text()
+        (tmp_path / f"{moment[:3]}.json").write_text(text, encoding="utf-8")
+    assert main(["compare", str(tmp_path / "110.json"), str(tmp_path / "115.json")]) == 1
+    told = capsys.readouterr().out.splitlines()
+    assert told[1] == "  Both carry revision A: give the new issue its own in project.toml."
+
+
 def test_the_same_calculation_is_called_so(issues: tuple[str, str], capsys: Capture) -> None:
     assert main(["compare", issues[0], issues[0]]) == 0
     assert capsys.readouterr().out.endswith(": the same calculation, 6 lines\n")

@@ -65,6 +65,7 @@ def changes(old: Record, new: Record, *, everything: bool) -> list[str]:
     typed = [pair for pair in pairs if (pair[1] or pair[0])["kind"] in (GIVEN, LOOKUP, NOTE)]
     return [
         f"{head}: {_counted(pairs)}",
+        *_same_letter(old, new),
         *_section("Checks with another verdict", verdicts, whole=True),
         *(
             _section("Lines", pairs, whole=True)
@@ -75,9 +76,21 @@ def changes(old: Record, new: Record, *, everything: bool) -> list[str]:
 
 
 def _issue(record: Record) -> str:
-    letters = [row.get("letter", "") for row in record.data["project"].get("revisions", [])]
-    revision = f" revision {letters[-1]}" if letters and letters[-1] else ""
+    letter = _letter(record)
+    revision = f" revision {letter}" if letter else ""
     return f"{record.calc_id}{revision} (record {record.digest})"
+
+
+def _letter(record: Record) -> str:
+    rows = record.data["project"].get("revisions", [])
+    return str(rows[-1].get("letter", "")) if rows else ""
+
+
+def _same_letter(old: Record, new: Record) -> Iterator[str]:
+    """Say that two issues that differ carry one letter: on paper nobody can tell them apart."""
+    letter = _letter(new)
+    if letter and letter == _letter(old):
+        yield f"  Both carry revision {letter}: give the new issue its own in project.toml."
 
 
 def _counted(pairs: Iterable[tuple[Entry, Entry]]) -> str:
