@@ -100,3 +100,12 @@ def test_project_facts_and_titles_are_no_part_of_the_calculation(
     again.data["calc"]["title"] = "Beam, revised"
     again.parts[0]["title"] = "Inputs"
     assert compare(stored, again) == []
+
+
+def test_two_long_texts_are_shown_where_they_part(stored: Record, again: Record) -> None:
+    line = next(iter(again.entries.values()))
+    stored.entries[line["id"]]["text"] = f"{'as written before, ' * 10}closer than 100 mm"
+    again.entries[line["id"]]["text"] = f"{'as written before, ' * 10}closer than 120 mm"
+    (said_of_it,) = said(stored, again)
+    start = "…" + ("as written before, " * 10 + "closer than 1")[-40:]
+    assert said_of_it == (f"{line['id']}: text stored '{start}00 mm', made again '{start}20 mm'")

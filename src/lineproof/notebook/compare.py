@@ -5,6 +5,7 @@ from __future__ import annotations
 import json
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
+from itertools import takewhile
 from typing import Any
 
 from lineproof.quantity.units import internal_factor
@@ -18,6 +19,10 @@ _MADE_FROM = (
     "kind", "formula", "typed", "table", "row", "procedure", "settings", "args", "numbers",
     "clause", "text", "alt", "columns", "rows",
 )  # fmt: skip
+
+
+_LONGEST, _BEFORE = 120, 40
+"""Of a text that differs: how much is shown, and how much of it before the place where it does."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -78,7 +83,7 @@ def shown(entry: Entry) -> str:
 def _changes(entry_id: str, old: Entry, new: Entry) -> Iterator[Change]:
     for what in _MADE_FROM:
         if old.get(what) != new.get(what):
-            yield Change(entry_id, what, _short(old.get(what)), _short(new.get(what)))
+            yield Change(entry_id, what, *_short(old.get(what), new.get(what)))
             if what == "kind":
                 return
     if old["kind"] in VALUES and not _same(old, new, "value"):
@@ -89,7 +94,7 @@ def _changes(entry_id: str, old: Entry, new: Entry) -> Iterator[Change]:
         for what in ("formula", "args"):
             first, second = old["closing"].get(what), new["closing"].get(what)
             if first != second:
-                yield Change(entry_id, f"closing {what}", _short(first), _short(second))
+                yield Change(entry_id, f"closing {what}", *_short(first, second))
 
 
 def _sides(entry_id: str, old: Entry, new: Entry) -> Iterator[Change]:
@@ -109,6 +114,13 @@ def _same(old: Entry, new: Entry, what: str) -> bool:
     return close(old[what] * scale, new[what] * scale)
 
 
-def _short(value: object) -> str:
-    text = value if isinstance(value, str) else json.dumps(value, ensure_ascii=False)
-    return repr(text if len(text) <= 120 else text[:119] + "…")  # noqa: PLR2004 - one line
+def _short(*values: object) -> list[str]:
+    """Return each value in a line, from shortly before the place where they part."""
+    texts = [v if isinstance(v, str) else json.dumps(v, ensure_ascii=False) for v in values]
+    alike = sum(1 for _ in takewhile(lambda them: len(set(them)) == 1, zip(*texts, strict=False)))
+    start = max(alike - _BEFORE, 0) if max(map(len, texts)) > _LONGEST else 0
+    return [repr("…" * (start > 0) + _cut(text[start:])) for text in texts]
+
+
+def _cut(text: str) -> str:
+    return text if len(text) <= _LONGEST else f"{text[: _LONGEST - 1]}…"
