@@ -70,24 +70,30 @@ def read_in_range(name: str, given: QuantityInput, allowed: Range, why: str = ""
     ``name`` is what the input is called, ``why`` says where the range comes from.
     """
     if given is None:
-        sample = f"{_plain(allowed.high / 4)} {allowed.unit}"
-        raise UserError(f"{name}: is missing; write for example '{sample}'")
+        raise UserError(f"{name}: is missing; write for example {_sample(allowed)}")
     typed = read_quantity(name, given, allowed.unit)
     value = typed.value
     low, high = (x * internal_factor(allowed.unit) for x in (allowed.low, allowed.high))
     if value < 0 or (value == 0 and not allowed.zero):
         what = "negative" if value < 0 else "zero"
         raise UserError(
-            f"{name}: {echo(given)} is {what}; write a positive value such as "
-            f"'{_plain(allowed.high / 4)} {allowed.unit}'"
+            f"{name}: {echo(given)} is {what}; write a positive value such as {_sample(allowed)}"
         )
     if not low <= value <= high:
+        limits = f"{_plain(allowed.low)} to {_with_unit(allowed.high, allowed)}"
         raise UserError(
-            f"{name}: {echo(given)} is outside {_plain(allowed.low)} to "
-            f"{f'{_plain(allowed.high)} {allowed.unit}'.strip()}"
-            f"{why or ', the range of the method'}; write a value inside it"
+            f"{name}: {echo(given)} is outside {limits}{why or ', the range of the method'}; "
+            "write a value inside it"
         )
     return typed
+
+
+def _sample(allowed: Range) -> str:
+    return repr(_with_unit(allowed.high / 4, allowed))
+
+
+def _with_unit(number: float, allowed: Range) -> str:
+    return f"{_plain(number)} {allowed.unit}".rstrip()
 
 
 def _plain(number: float) -> str:

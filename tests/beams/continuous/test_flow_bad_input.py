@@ -370,3 +370,14 @@ def test_a_torque_per_metre_may_be_typed_as_the_message_and_the_page_write_it() 
     assert [read_torques("torques", {"D": text})["D"].value for text in texts] == [5.5e6] * 3
     with pytest.raises(UserError, match=r"'5\.5 kN' is a force"):
         read_torques("torques", {"D": "5.5 kN"})
+
+
+def test_a_share_without_a_unit_is_refused_without_a_blank_for_it() -> None:
+    matches(
+        refused_at_start(sustained=50),
+        "sustained: '50' is outside 0 to 1, the range of the method; write a value inside it",
+    )
+    matches(
+        refused_at_start(sustained=-0.1),
+        "sustained: '-0.1' is negative; write a positive value such as '0.25'",
+    )
