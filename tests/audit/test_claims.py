@@ -255,7 +255,7 @@ def test_odd_spelling_with_one_meaning_is_read(
             "is an error of a spreadsheet; write the value, or leave the cell empty",
         ),
         ("beam/d", "tbd", "holds no number; write for example '25 mm', or leave the cell empty"),
-        ("beam/d", "21.2 inches", "not a unit of the list; write it in mm, cm, m, in, ft"),
+        ("beam/d", "21.2 inchs", "not a unit of the list; write it in mm, cm, m, in, ft"),
         ("given/f_c", "30 kN/cm2", "not a unit of the list; write it in MPa, Pa, kPa"),
         ("strength/M_r", "207 kN-mm2", "'kN-mm2' is not a unit of the list"),
         ("given/n_b", "4 bars", "has a unit, and this line has none; write '4'"),

@@ -61,6 +61,10 @@ def test_typed_values(typed: Any, unit: str, value: float, number: str) -> None:
         ("2 ft 2 in", "in", ("f_c: '2 ft 2 in': 'ft 2 in' is not a unit of the list; "
                              "write one number with one unit, such as '26 in'")),
         ("32 Mpa", "MPa", "f_c: '32 Mpa': 'Mpa' is not a unit of the list; write 'MPa'"),
+        ("15 yards", "mm", ("f_c: '15 yards': 'yards' is not a unit of the list; "
+                            "write it in mm, cm, m, in, ft")),
+        ("3 kn", "m", "f_c: '3 kn': 'kn' is not a unit of the list; write it in m, mm, cm, in, ft"),
+        ("50 %", "", "f_c: '50 %' is in percent; write '0.5'"),
         ("0,65", "", "f_c: '0,65' is not a number with a unit; write a decimal point: '0.65'"),
         ("7,6 m", "mm", "f_c: '7,6 m' is not a number with a unit; write a decimal point: '7.6 m'"),
         ("abc", "MPa", "f_c: 'abc' is not a number with a unit; write for example '25 MPa'"),

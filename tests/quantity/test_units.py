@@ -85,7 +85,8 @@ def test_published_factors_to_their_digits(unit: str, into: str, published: floa
     [
         ("kN·m", "kN.m"), ("kN*m", "kN.m"), ("mm²", "mm2"), ("mm^4", "mm4"), ("kN/m³", "kN/m3"),
         ("°", "deg"), ("degrees", "deg"), ("N/mm2", "MPa"), ("kN/m2", "kPa"), ("hours", "h"),
-        ("kips", "kip"), (" mm ", "mm"), ("-", ""),
+        ("kips", "kip"), (" mm ", "mm"), ("-", ""), ("kN-m", "kN.m"), ("kN m", "kN.m"),
+        ("kip-ft", "kip.ft"), ("inches", "in"), ("feet", "ft"), ("hr", "h"),
     ],
 )  # fmt: skip
 def test_other_ways_to_write_a_unit(typed: str, spelling: str) -> None:

@@ -16,7 +16,7 @@ from lineproof.quantity.units import (
     example_unit,
     factor,
     unit_named,
-    units_of_kind,
+    usual_units,
 )
 
 # ASCII digits only; the number ends where no digit and no point follows.
@@ -144,18 +144,20 @@ def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: U
             suggestion = f"{number} {example_unit(wanted)}"
             raise UserError(f"{name}: {echo(given)} has no unit; write {suggestion!r}")
         return wanted
+    if unit_text == "%" and wanted.kind == "number":
+        share = f"{Decimal(number) / 100:f}"
+        raise UserError(f"{name}: {echo(given)} is in percent; write {share!r}")
+    # Where no unit is asked, one of any kind may have been meant.
     try:
-        unit = unit_named(unit_text)
+        unit = unit_named(unit_text, None if wanted.kind == "number" else wanted)
     except UserError as error:
         raise UserError(f"{name}: {echo(given)}: {error.faults[0]}") from None
     if unit.kind != wanted.kind:
         if wanted.kind == "number":
             raise UserError(f"{name}: {echo(given)} has a unit; write the bare number {number!r}")
-        usual = example_unit(wanted)  # a load is thought of in kPa, a strength in MPa: that first
-        units = dict.fromkeys((usual, *units_of_kind(wanted.kind)))
         raise UserError(
             f"{name}: {echo(given)} is {_a(unit.kind)}, but {_a(wanted.kind)} is needed; "
-            f"write it in {', '.join(units)}"
+            f"write it in {', '.join(usual_units(wanted))}"
         )
     return unit
 

@@ -132,7 +132,9 @@ NOT_METRIC = frozenset(
 
 _SAME_UNIT = {
     "degrees": "deg", "degree": "deg", "°": "deg", "kN/m2": "kPa", "N/mm2": "MPa", "kNm": "kN.m",
-    "kip.ft.": "kip.ft", "kips": "kip", "hours": "h", "hour": "h", "days": "d", "-": "",
+    "kip.ft.": "kip.ft", "kips": "kip",
+    "inches": "in", "inch": "in", "feet": "ft", "hours": "h", "hour": "h", "hr": "h",
+    "days": "d", "-": "",
 }  # fmt: skip
 
 _EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "force": "kN"}
@@ -167,29 +169,44 @@ def plain_spelling(text: str) -> str:
 
 
 @lru_cache(maxsize=1024)
-def unit_named(text: str) -> Unit:
-    """Return the unit of the closed list, or raise :class:`UserError` with the nearest names."""
+def unit_named(text: str, wanted: Unit | None = None) -> Unit:
+    """Return the unit of the closed list, or raise :class:`UserError` with the nearest names.
+
+    With ``wanted``, the error names units of its kind alone.
+    """
     spelling = plain_spelling(text) if len(text) <= 20 else text  # noqa: PLR2004 - longest is 7
     found = UNITS.get(spelling)
     if found is None:
-        near = _nearest(spelling)
-        hint = f"; write {near or _EXAMPLES}"
-        if any(letter.isdigit() for letter in spelling[1:-1]) and " " in spelling:
-            hint = "; write one number with one unit, such as '26 in'"
-        raise UserError(f"{text[:40]!r} is not a unit of the list{hint}")
+        raise UserError(
+            f"{text[:40]!r} is not a unit of the list; write {_advice(spelling, wanted)}"
+        )
     return found
 
 
-def _nearest(spelling: str) -> str:
+def _advice(spelling: str, wanted: Unit | None) -> str:
+    near = [n for n in _nearest(spelling) if wanted is None or UNITS[n].kind == wanted.kind]
+    if any(letter.isdigit() for letter in spelling[1:-1]) and " " in spelling:
+        return "one number with one unit, such as '26 in'"
+    if near:
+        return " or ".join(map(repr, near))
+    return f"it in {', '.join(usual_units(wanted))}" if wanted else _EXAMPLES
+
+
+def _nearest(spelling: str) -> list[str]:
     folded = {name.lower(): name for name in UNITS if name}
     if spelling.lower() in folded:  # right but for capitals
-        return repr(folded[spelling.lower()])
+        return [folded[spelling.lower()]]
     words = ["lbf" if word == "lb" else word for word in re.split("[ .-]+", spelling[:20].lower())]
-    for product in (".".join(words), ".".join(reversed(words))):  # ft lb, kip-ft
+    for product in (".".join(words), ".".join(reversed(words))):  # ft lb, kip-in
         if product in folded:
-            return repr(folded[product])
+            return [folded[product]]
     close = difflib.get_close_matches(spelling[:20].lower(), folded, n=3, cutoff=0.6)
-    return " or ".join(repr(folded[name]) for name in close)
+    return [folded[name] for name in close]
+
+
+def usual_units(wanted: Unit) -> tuple[str, ...]:
+    """Return the spellings for a kind, the usual one first: kPa for loads."""
+    return tuple(dict.fromkeys((example_unit(wanted), *units_of_kind(wanted.kind))))
 
 
 def units_of_kind(kind: str) -> tuple[str, ...]:

@@ -10,7 +10,6 @@ from lineproof.errors import UserError
 from lineproof.quantity import echo, read_quantity
 from lineproof.quantity.digits import MINUS
 from lineproof.quantity.typed import Typed
-from lineproof.quantity.units import UNITS, units_of_kind
 
 _BARE = re.compile(r"[+-]?[\d.,' ]+(?:[eE][+-]?\d+)?\Z")
 _DASHES = rf"[{MINUS}\u2010-\u2015\ufe63\uff0d]"
@@ -30,7 +29,6 @@ _PERCENT = re.compile(r"([+-]?\d*\.?\d+) ?%\Z")
 _STORED = re.compile(r"(\S+) \(shown in (\w+)\)\Z")
 _BRACKETS = re.compile(r"\(([\d.]+)\)|([\d.]+)-\Z")
 _COUNTED = re.compile(r"([+-]?\d+\.?\d*) [A-Za-z].*")
-_UNKNOWN = re.compile(r"(.* is not a unit of the list); write (.*)")
 
 
 def is_date(text: str) -> bool:
@@ -50,10 +48,12 @@ def read_claimed(node: Node, typed: str, unit: str) -> Typed:
         raise UserError(f"{echo(typed)} {refused}")
     own = "" if not node.unit and _NO_UNIT.fullmatch(unit) else unit
     whole = f"{text} {own}".strip() if _BARE.match(text) else text
-    try:
-        return read_quantity(node.symbol, whole, node.unit)
-    except UserError as error:
-        raise UserError(_of_its_kind(node, error.faults[0], whole)) from None
+    counted = not node.unit and _COUNTED.fullmatch(whole)
+    if counted:
+        raise UserError(
+            f"{node.symbol}: {echo(whole)} has a unit, and this line has none; write {counted[1]!r}"
+        )
+    return read_quantity(node.symbol, whole, node.unit)
 
 
 def _refused(node: Node, text: str) -> str:
@@ -120,19 +120,3 @@ def _grouped(text: str) -> str:
     if marks == {","} and not tail and len(found[2]) == len(",000"):
         return f"{whole!r}, or {found[0].replace(',', '.')!r} if the comma is the decimal point"
     return repr(whole + tail.replace(",", "."))
-
-
-def _of_its_kind(node: Node, fault: str, text: str) -> str:
-    """Return a fault that names units of the line's own kind, the nearest alone if it is one."""
-    unknown = _UNKNOWN.match(fault)
-    if unknown is None:
-        return fault
-    kind = UNITS[node.unit].kind
-    if kind == "number":
-        counted = _COUNTED.fullmatch(text)
-        number = counted[1] if counted else "25"
-        return f"{node.symbol}: {echo(text)} has a unit, and this line has none; write {number!r}"
-    near = [] if unknown[2].startswith("one ") else re.findall(r"'([^']+)'", unknown[2])
-    named = [unit for unit in near if unit in units_of_kind(kind)]
-    told = " or ".join(map(repr, named)) or f"it in {', '.join(units_of_kind(kind))}"
-    return f"{unknown[1]}; write {told}"
