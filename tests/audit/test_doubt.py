@@ -82,6 +82,29 @@ def test_beside_a_rounding_to_the_unsafe_side_another_place_is_asked_about(
     assert (" = 119.8 kN written in this row" in note) is (spans > 1)
 
 
+@pytest.mark.parametrize(
+    ("clear", "expected"), [("5.4 m", Verdict.UNSAFE_ROUNDING), ("5.702 m", Verdict.DOUBTFUL)]
+)
+def test_a_rounding_of_other_values_than_claimed_is_doubted_for_a_slip_with_these(
+    clear: str, expected: Verdict
+) -> None:
+    """w_f = 20.3 + 20 = 40.3 kN/m gives 120.9 kN, which 120 may round; but 42.3 is claimed.
+
+    With that and l_n for l it is 42.25 x 5.702/2 = 120.46 to 42.35 x 5.702/2 = 120.74, so that 120
+    follows within the digits of 42.3; with 5.4 m it is 114 kN.
+    """
+    made = {"w_f = w_D + w_L": "kN/m", "V_f = w_f*l/2": "kN"}
+    given = {"w_D": "20.3 kN/m", "w_L": "20 kN/m", "l": "6 m", "l_n": clear, "V_r": "121 kN"}
+    sheet = sheet_of(made, given)
+    with sheet.part("checks", "Span 1: checks"):
+        sheet.check("V_f <= V_r", key="shear", title="Shear resistance")
+    verdict, note = said_of(sheet.close(), {"beam/w_f": "42.3", "beam/V_f": "120"}, "beam/V_f")
+    assert verdict is expected
+    assert note.startswith("120.90 kN rounded down to a step of 1 kN: not conservative")
+    told = "the same value is reproduced within the digits of its arguments with l_n ("
+    assert (told in note) is (expected is Verdict.DOUBTFUL)
+
+
 def test_a_slip_that_is_no_rounding_stays_an_origin() -> None:
     assert said_of(shear(), {"beam/V_f": "119.9"}, "beam/V_f")[0] is Verdict.ORIGIN
 

@@ -26,8 +26,8 @@ def plausible(
 ) -> tuple[Slip, Cause] | None:
     """Return the likeliest slip that gives a claim to its last digit, and which of its causes.
 
-    ``loosely`` takes what gives it within the digits of its arguments: beside a reading that rests
-    on other values than those claimed.
+    ``loosely`` takes what gives it within the digits of its arguments: beside a reading not to the
+    safe side that rests on other values than those claimed.
 
     None if there is none. Only mistakes that a checker knows by name count, made in the line
     itself: of slips that have as many ways as a number has digits, a place other quantities, or a

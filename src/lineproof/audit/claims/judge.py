@@ -293,7 +293,7 @@ class _Judge:
                 safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
                 if rounded.usual or safe:
                     said = self._rounded(node, claim, judged, rounded, safe=safe)
-                    elsewhere = not judged.follows.holds(rounded.of)
+                    elsewhere = not safe and not judged.follows.holds(rounded.of)
                     return self._beside_a_slip(node, claim, said, loosely=elsewhere)
         return None
 
