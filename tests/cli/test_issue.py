@@ -147,7 +147,7 @@ def test_drawings_and_tables_are_issued_beside_the_package(
     first = tmp_path / "first"
     assert files_in(first) == ["B-1-bar-schedule.csv", "B-1-elevation.dxf", *NAMES]
     assert (first / "B-1-bar-schedule.csv").read_bytes() == (
-        b'\xef\xbb\xbfMark,"Length, mm"\r\nB1,4000\r\n\'=x,-1\r\n'
+        b'\xef\xbb\xbfCalc,Mark,"Length, mm"\r\nB 1,B1,4000\r\nB 1,\'=x,-1\r\n'
     )
     (line,) = ezdxf.readfile(first / "B-1-elevation.dxf").modelspace().query("LINE")
     assert (line.dxf.end.x, line.dxf.layer) == (4000.0, "S-CONCRETE")

@@ -52,11 +52,13 @@ def test_the_elevation_is_the_figure_at_full_scale() -> None:
 def test_the_schedule_reads_back_as_recorded() -> None:
     content = calc_files(whole_beam().close().data)["B9-bar-schedule.csv"]
     rows = rows_of(content)
-    assert content.startswith(b"\xef\xbb\xbfMark,Size,Number")
-    assert rows[0] == [
+    assert content.startswith(b"\xef\xbb\xbfCalc,Mark,Size,Number")
+    assert rows[0][1:] == [
         "Mark", "Size", "Number", "Shape", "A, mm", "B, mm", "Length, mm", "Mass, kg", "Where"
     ]  # fmt: skip
-    assert rows[1][:8] == ["B1", "25M", "4", "00", "7010", "–", "7010", "111"]
+    assert rows[1][:9] == ["B9", "B1", "25M", "4", "00", "7010", "–", "7010", "111"]
+    # Bar marks begin anew in each calc: put under another table, a row still says whose bar it is.
+    assert {row[0] for row in rows[1:]} == {"B9"}
     assert len(rows) == 9
 
 

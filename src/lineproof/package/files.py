@@ -29,7 +29,7 @@ def file_name(calc_id: str) -> str:
 def calc_files(record: Mapping[str, Any]) -> dict[str, bytes]:
     """Return the files that a record's figures and tables ask for, by name."""
     return {
-        name: table_csv(entry) if ending == "csv" else _drawing(record, entry)
+        name: _table(record, entry) if ending == "csv" else _drawing(record, entry)
         for name, ending, entry in _asked(record)
     }
 
@@ -59,6 +59,13 @@ def _drawing(record: Mapping[str, Any], entry: Mapping[str, Any]) -> bytes:
     below = ((figure.width / 2 - figure.origin[0]) / figure.scale,
              (-_BELOW - figure.origin[1]) / figure.scale)  # fmt: skip
     return dxf(replace(figure, shapes=(*figure.shapes, Text(below, words(told)))))
+
+
+def _table(record: Mapping[str, Any], entry: Mapping[str, Any]) -> bytes:
+    """Return a table as CSV, each row with its calc: tables of several beams are put together."""
+    calc = record["calc"]["id"]
+    rows = [[calc, *row] for row in entry["rows"]]
+    return table_csv({"columns": ["Calc", *entry["columns"]], "rows": rows})
 
 
 def table_csv(entry: Mapping[str, Any]) -> bytes:
