@@ -210,16 +210,22 @@ def test_a_moment_that_does_not_follow_from_the_shear_is_found() -> None:
     assert "(lines 5, 6)" in found[0]
 
 
-def test_shears_in_the_wrong_unit_or_sign_are_found() -> None:
-    assert any(
-        "but V gives" in f for f in faults(lambda: forces(header=HEADER.replace("(kN)", "(N)")))
-    )
-    lines = []
-    for line in rows():
+@pytest.mark.parametrize("column", [4, 5])
+def test_a_file_with_m_or_v_turned_throughout_is_told_once(column: int) -> None:
+    """Frame programs with moments positive at the top, or shears positive upwards on the right."""
+
+    def turned(line: str) -> str:
         cells = line.split(",")
-        cells[5] = str(-float(cells[5]))
-        lines.append(",".join(cells))
-    assert any("look at signs" in fault for fault in faults(lambda: forces(lines)))
+        cells[column] = str(-float(cells[column]))
+        return ",".join(cells)
+
+    (fault,) = faults(lambda: forces([turned(line) for line in rows()]))
+    assert fault.endswith("write M or V with the other sign")
+
+
+def test_shears_in_the_wrong_unit_are_found() -> None:
+    header = HEADER.replace("(kN)", "(N)")
+    assert any("but V gives" in fault for fault in faults(lambda: forces(header=header)))
 
 
 def test_moments_that_differ_across_a_station_are_found() -> None:

@@ -101,6 +101,7 @@ def read_forces(
     table = _table(read_table(source, name, FORCES), lengths, faults)
     faults.raise_if_any()
     _check_once(table, faults)
+    _check_signs(table, faults)
     faults.raise_if_any()
     known = breaks or {}
     largest = _largest(table)
@@ -151,6 +152,19 @@ def _check_once(table: Table, faults: FileFaults) -> None:
                     f"{case}, span {number}: all stations stand twice (lines {lines[0]} to "
                     f"{lines[-1]}); write every case once, or give the second another name"
                 )
+
+
+def _check_signs(table: Table, faults: FileFaults) -> None:
+    """Find a file whose M and V follow opposite conventions: every station of it would fail."""
+    pairs = [each for spans in table.values() for rows in spans.values() for each in pairwise(rows)]
+    gained = [(b.M - a.M, (a.V + b.V) / 2 * (b.x - a.x)) for a, b in pairs]
+    as_written, turned = (sum(abs(M - sign * V) for M, V in gained) for sign in (1, -1))
+    if turned < TOLERANCE * as_written:
+        faults.add(
+            "M falls wherever V is positive and grows wherever it is negative, throughout the "
+            "file; here M is positive where the bottom is in tension and grows where V is "
+            "positive; write M or V with the other sign"
+        )
 
 
 def _check_stations(
