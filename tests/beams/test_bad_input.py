@@ -6,6 +6,7 @@ from typing import Any
 
 import pytest
 
+from lineproof.beams.inputs import RANGES, read_input
 from lineproof.errors import UserError
 from lineproof.sheet import Sheet
 
@@ -19,9 +20,9 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "negative": (
         {"span": "-7 m"},
-        "span: '-7 m' is negative; write a positive value such as '10 m'",
+        "span: '-7 m' is negative; write a positive value such as '8 m'",
     ),
-    "zero": ({"h": "0 mm"}, "h: '0 mm' is zero; write a positive value such as '750 mm'"),
+    "zero": ({"h": "0 mm"}, "h: '0 mm' is zero; write a positive value such as '600 mm'"),
     "not a number": (
         {"spacing": float("nan")},
         "spacing: 'nan' is not a number with a unit; write for example '25 m'",
@@ -177,7 +178,7 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "negative floor": (
         {**RECTANGULAR, "floor_weight": "-1 kPa"},
-        "floor_weight: '-1 kPa' is negative; write a positive value such as '25 kPa'",
+        "floor_weight: '-1 kPa' is negative; write a positive value such as '3.4 kPa'",
     ),
     "light, called normal": (
         {"gamma_c": "2149 kg/m3"},
@@ -283,3 +284,12 @@ def test_compression_bars_below_the_axis() -> None:
     ) as caught:
         record_of(bottom_bars="4-25M", compression_bars="2-20M")
     assert "leave them out: compression_bars = None" in str(caught.value)
+
+
+@pytest.mark.parametrize("name", RANGES)
+def test_what_is_told_to_write_is_taken(name: str) -> None:
+    """The sample of a message lies in the range itself: 625 kg/m3 was told, and refused."""
+    with pytest.raises(UserError) as caught:
+        read_input(name, "-1 " + RANGES[name].unit)
+    sample = caught.value.faults[0].rpartition(" such as ")[2].strip("'")
+    assert read_input(name, sample).value > 0

@@ -29,32 +29,33 @@ MINIMUM_RULES = ("10.5.1.1", "10.5.1.2")
 
 @dataclass(frozen=True, slots=True)
 class Range:
-    """The unit in which an input is printed and the range the method covers, in that unit."""
+    """The unit in which an input is printed, the range the method covers, a usual value in it."""
 
     unit: str
     low: float
     high: float
+    usual: float
     zero: bool = False
 
 
 RANGES: Mapping[str, Range] = {
-    "span": Range("m", 1, 40),
-    "spacing": Range("m", 0.3, 20),
-    "tributary_width": Range("m", 0.1, 20),
-    "b_w": Range("mm", 100, 2000),
-    "h": Range("mm", 150, 3000),
-    "h_f": Range("mm", 20, 1000),
-    "b_f": Range("mm", 100, 20000),
-    "d": Range("mm", 60, 3000),
-    "f_c": Range("MPa", LEAST_F_C, MOST_F_C),
-    "gamma_c": Range("kg/m3", 1500, 2500),
-    "superimposed": Range("kPa", 0, 100, zero=True),
-    "floor_weight": Range("kPa", 0, 100, zero=True),
-    "live_load": Range("kPa", 0.1, 100),
-    "cover": Range("mm", 10, 200),
-    "aggregate": Range("mm", 5, 40),
-    "fire_rating": Range("h", 0.5, 4),
-    "M_f": Range("kN.m", 0, 1e6, zero=True),
+    "span": Range("m", 1, 40, 8),
+    "spacing": Range("m", 0.3, 20, 3.1),
+    "tributary_width": Range("m", 0.1, 20, 1.7),
+    "b_w": Range("mm", 100, 2000, 400),
+    "h": Range("mm", 150, 3000, 600),
+    "h_f": Range("mm", 20, 1000, 140),
+    "b_f": Range("mm", 100, 20000, 1900),
+    "d": Range("mm", 60, 3000, 540),
+    "f_c": Range("MPa", LEAST_F_C, MOST_F_C, 30),
+    "gamma_c": Range("kg/m3", 1500, 2500, 2400),
+    "superimposed": Range("kPa", 0, 100, 1.8, zero=True),
+    "floor_weight": Range("kPa", 0, 100, 3.4, zero=True),
+    "live_load": Range("kPa", 0.1, 100, 4.8),
+    "cover": Range("mm", 10, 200, 40),
+    "aggregate": Range("mm", 5, 40, 20),
+    "fire_rating": Range("h", 0.5, 4, 2),
+    "M_f": Range("kN.m", 0, 1e6, 250, zero=True),
 }
 _OUTSIDE = {"f_c": " (A23.3, 8.6.1.1)"}
 
@@ -89,7 +90,7 @@ def read_in_range(name: str, given: QuantityInput, allowed: Range, why: str = ""
 
 
 def _sample(allowed: Range) -> str:
-    return repr(_with_unit(allowed.high / 4, allowed))
+    return repr(_with_unit(allowed.usual, allowed))
 
 
 def _with_unit(number: float, allowed: Range) -> str:

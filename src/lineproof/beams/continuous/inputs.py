@@ -57,9 +57,9 @@ from lineproof.standards.a23_3.materials import DENSITY_FACTORS
 from lineproof.standards.codes import CodePair
 from lineproof.standards.nbc.loads import USES
 
-AREA = Range("kPa", 0, 100, zero=True)
-SHARE = Range("", 0, 1, zero=True)
-UNIT_WEIGHT = Range("kN/m3", 10, 30)
+AREA = Range("kPa", 0, 100, 1.8, zero=True)
+SHARE = Range("", 0, 1, 0.25, zero=True)
+UNIT_WEIGHT = Range("kN/m3", 10, 30, 24)
 LEAST_LEGS, MOST_LEGS = 2, 6
 
 

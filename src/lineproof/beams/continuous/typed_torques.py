@@ -10,7 +10,7 @@ from lineproof.errors import FaultList, UserError
 from lineproof.quantity import QuantityInput, Typed, echo
 from lineproof.quantity.units import plain_spelling
 
-TORQUE = Range("kN.m", 0, 1000, zero=True)
+TORQUE = Range("kN.m", 0, 1000, 6, zero=True)
 KINDS_OF_TORSION = ("compatibility", "equilibrium")
 
 
