@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import os
-from collections.abc import Callable
+from collections.abc import Callable, Mapping
 from pathlib import Path
 from typing import Any
 
@@ -18,7 +18,7 @@ from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.model import Model
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
-from lineproof.record import Record
+from lineproof.record import Entry, Record
 from lineproof.record.recompute import recompute
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
@@ -461,6 +461,20 @@ def test_a_moment_at_a_free_end_is_refused(tmp_path: Path) -> None:
     assert "M is -20 kN.m at support 1, which is given as a free end" in found[0]
 
 
+def simple_span(folder: Path, sign: int) -> Mapping[str, Entry]:
+    """Analyse 7 m by a file with M = 42*x - 6*x**2 [kN.m] and V = 42 - 12*x [kN], times a sign."""
+    places = [x / 2 for x in range(15)]
+    rows = [
+        f"1,{x},all,1.25D+1.5L,{sign * (42 * x - 6 * x**2)},{sign * (42 - 12 * x)}" for x in places
+    ]
+    header = "span,station (m),case,combination,M (kN.m),V (kN)"
+    beam = analysed(
+        spans=["7 m"], supports=["column 450 mm"] * 2,
+        forces_csv=frame_files.write(folder / "frame.csv", rows, header),
+    )  # fmt: skip
+    return beam.sheet.entries_of("analysis")
+
+
 def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) -> None:
     """One span of 7 m at 12 kN/m: V falls by 84 kN, M = 42*x - 6*x**2.
 
@@ -468,14 +482,7 @@ def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) 
     20.3736 kN/m; w_L = 4.8*3.1 = 14.88 kN/m. 1.25D + 1.5L:
     7*(1.25*20.3736 + 1.5*14.88) = 334.51 kN.
     """
-    rows = [
-        f"1,{x / 2},all,1.25D+1.5L,{42 * x / 2 - 6 * (x / 2) ** 2},{42 - 6 * x}" for x in range(15)
-    ]
-    header = "span,station (m),case,combination,M (kN.m),V (kN)"
-    entries = analysed(
-        spans=["7 m"], supports=["column 450 mm"] * 2,
-        forces_csv=frame_files.write(tmp_path / "frame.csv", rows, header),
-    ).sheet.entries_of("analysis")  # fmt: skip
+    entries = simple_span(tmp_path, 1)
 
     check = entries["imported-load-1"]
     assert not check
@@ -486,14 +493,7 @@ def test_a_file_of_unfactored_loads_fails_against_the_take_down(tmp_path: Path) 
 
 def test_a_file_with_both_signs_turned_fails_and_is_told(tmp_path: Path) -> None:
     """M = 6*x**2 - 42*x with V = 12*x - 42 closes by statics, but its load of 84 kN acts upward."""
-    rows = [
-        f"1,{x / 2},all,1.25D+1.5L,{6 * (x / 2) ** 2 - 42 * x / 2},{6 * x - 42}" for x in range(15)
-    ]
-    header = "span,station (m),case,combination,M (kN.m),V (kN)"
-    check = analysed(
-        spans=["7 m"], supports=["column 450 mm"] * 2,
-        forces_csv=frame_files.write(tmp_path / "frame.csv", rows, header),
-    ).sheet.entries_of("analysis")["imported-load-1"]  # fmt: skip
+    check = simple_span(tmp_path, -1)["imported-load-1"]
 
     assert not check
     assert check.value[1] == pytest.approx(-84e3)
