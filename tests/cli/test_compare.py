@@ -14,10 +14,12 @@ from lineproof.record import Record
 Capture = pytest.CaptureFixture[str]
 
 
-def record(calc: str = "B7", *, moment: str, use: str = "office", letter: str = "A") -> Record:
+def record(
+    calc: str = "B7", *, moment: str, use: str = "office", letter: str = "A", issue: str = ""
+) -> Record:
     """A check of a moment against 60 kN x 2 m = 120 kN.m."""
     revisions = [{"letter": letter, "date": "2026-12-01", "description": "issued"}]
-    sheet = Sheet(calc, project={"revisions": revisions})
+    sheet = Sheet(calc, project={"revisions": revisions, "issue": {"revision": issue}})
     with sheet.part("given", "Given"):
         sheet.given("M", moment, "moment")
         sheet.given("P", "60 kN", "force")
@@ -65,6 +67,17 @@ def test_two_issues_of_one_letter_are_told_apart(tmp_path: Path, capsys: Capture
     assert main(["compare", str(tmp_path / "110.json"), str(tmp_path / "115.json")]) == 1
     told = capsys.readouterr().out.splitlines()
     assert told[1] == "  Both carry revision A: give the new issue its own in project.toml."
+
+
+def test_the_revision_is_the_one_that_the_cover_names(tmp_path: Path, capsys: Capture) -> None:
+    """project.toml may name the revision of the issue itself; the list below it is the history."""
+    for name, issue in (("a", ""), ("c", "C")):
+        text = record(moment="110 kN.m" if name == "a" else "115 kN.m", issue=issue).to_text()
+        (tmp_path / f"{name}.json").write_text(text, encoding="utf-8")
+    assert main(["compare", str(tmp_path / "a.json"), str(tmp_path / "c.json")]) == 1
+    told = capsys.readouterr().out
+    assert "to B7 revision C" in told
+    assert "Both carry" not in told
 
 
 def test_the_same_calculation_is_called_so(issues: tuple[str, str], capsys: Capture) -> None:

@@ -12,6 +12,7 @@ from typing import Any
 from lineproof.errors import UserError
 from lineproof.notebook.compare import compare
 from lineproof.notebook.records import read_records
+from lineproof.package.facts import revision_of
 from lineproof.record import Record
 from lineproof.record.entry import CHECK, CRITERIA, GIVEN, LOOKUP, NOTE, VALUES
 from lineproof.typeset import printable
@@ -65,7 +66,7 @@ def changes(old: Record, new: Record, *, everything: bool) -> list[str]:
     typed = [pair for pair in pairs if (pair[1] or pair[0])["kind"] in (GIVEN, LOOKUP, NOTE)]
     return [
         f"{head}: {_counted(pairs)}",
-        *_same_letter(old, new),
+        *_same_revision(old, new),
         *_section("Checks with another verdict", verdicts, whole=True),
         *(
             _section("Lines", pairs, whole=True)
@@ -76,21 +77,16 @@ def changes(old: Record, new: Record, *, everything: bool) -> list[str]:
 
 
 def _issue(record: Record) -> str:
-    letter = _letter(record)
-    revision = f" revision {letter}" if letter else ""
-    return f"{record.calc_id}{revision} (record {record.digest})"
+    revision = revision_of(record.data["project"])
+    named = f" revision {revision}" if revision else ""
+    return f"{record.calc_id}{named} (record {record.digest})"
 
 
-def _letter(record: Record) -> str:
-    rows = record.data["project"].get("revisions", [])
-    return str(rows[-1].get("letter", "")) if rows else ""
-
-
-def _same_letter(old: Record, new: Record) -> Iterator[str]:
-    """Say that two issues that differ carry one letter: on paper nobody can tell them apart."""
-    letter = _letter(new)
-    if letter and letter == _letter(old):
-        yield f"  Both carry revision {letter}: give the new issue its own in project.toml."
+def _same_revision(old: Record, new: Record) -> Iterator[str]:
+    """Say that two issues that differ carry one revision: on paper nobody can tell them apart."""
+    revision = revision_of(new.data["project"])
+    if revision and revision == revision_of(old.data["project"]):
+        yield f"  Both carry revision {revision}: give the new issue its own in project.toml."
 
 
 def _counted(pairs: Iterable[tuple[Entry, Entry]]) -> str:

@@ -90,11 +90,22 @@ def project_facts(
         criteria=_criteria(facts, codes),
         status=_status(facts.text("issue", "status")),
         superseded=facts.text("issue", "superseded"),
-        revision=facts.text("issue", "revision") or (revisions[-1].letter if revisions else ""),
+        revision=revision_of(project),
         date=_date(date_text),
         date_text=date_text,
         paper=_paper(facts.text("paper", "size")),
     )
+
+
+def revision_of(project: Mapping[str, Any]) -> str:
+    """Return the revision that the cover names: that of the issue, else the last one listed.
+
+    >>> revision_of({"revisions": [{"letter": "A"}, {"letter": "B"}]})
+    'B'
+    """
+    facts = _Tables(project)
+    letters = [_text(row, "letter") for row in facts.rows("revisions")]
+    return facts.text("issue", "revision") or (letters[-1] if letters else "")
 
 
 class _Tables:
