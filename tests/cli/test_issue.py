@@ -172,6 +172,23 @@ def test_drawings_of_an_earlier_issue_do_not_stay_beside_the_new_ones(
     assert f"{gone}: of the earlier issue, not made by this one; removed" in capsys.readouterr().err
 
 
+def test_tables_of_two_calcs_stand_in_one_file_as_well(
+    unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    paths = [save(drawn(unrun, name), tmp_path / f"{name}.ipynb") for name in ("B1", "B2")]
+    issue = ["issue", *map(str, paths), "--into", str(tmp_path / "out")]
+    assert main(issue) == 0
+    joined = tmp_path / "out" / "package-bar-schedule.csv"
+    assert joined.read_text("utf-8-sig").splitlines() == [
+        'Calc,Mark,"Length, mm"', "B1,B1,4000", "B1,'=x,-1", "B2,B1,4000", "B2,'=x,-1",
+    ]  # fmt: skip
+    save(unrun, paths[0])  # lists no bars any more: the old file would be taken for that of both
+    capsys.readouterr()
+    assert main(issue) == 0
+    assert not joined.exists()
+    assert f"{joined}: of the earlier issue" in capsys.readouterr().err
+
+
 def test_drawings_of_two_calcs_do_not_overwrite_each_other(
     unrun: Notebook, tmp_path: Path, capsys: pytest.CaptureFixture[str]
 ) -> None:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import csv
 import io
 from typing import Any
 
@@ -12,12 +11,8 @@ from ezdxf.filemanagement import read
 from lineproof.package import calc_files
 from lineproof.package.files import file_name, table_csv
 
+from .csv_rows import rows_of
 from .whole_beam import SPANS, whole_beam
-
-
-def rows_of(content: bytes) -> list[list[str]]:
-    """Read a CSV file back, by another reader than the one under test."""
-    return list(csv.reader(io.StringIO(content.decode("utf-8-sig"), newline=""), strict=True))
 
 
 def table(*cells: str) -> dict[str, Any]:

@@ -17,11 +17,11 @@ from lineproof.errors import FaultList, UserError
 from lineproof.notebook.records import read_records
 from lineproof.notebook.reviews import printed_beside
 from lineproof.package.facts import PAPERS
+from lineproof.package.joined import PACKAGE_NAME
 from lineproof.package.reviewed import PrintedReview
 from lineproof.quantity import echo
 
 DEFAULT_FOLDER = "issued"
-PACKAGE_NAME = "package"
 
 
 def run(options: argparse.Namespace) -> int:
@@ -116,6 +116,7 @@ def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Pat
     from lineproof.package import (  # noqa: PLC0415 - 0.1 s
         build_package,
         calc_files,
+        joined_files,
         to_html,
         to_pdf,
     )
@@ -134,11 +135,14 @@ def _files(reruns: Sequence[Rerun], folder: Path, paper: str | None) -> dict[Pat
     }
     for rerun in reruns:
         printed[folder / f"{rerun.path.stem}.json"] = f"{rerun.calc.record.to_text()}\n".encode()
-    for rerun in reruns:
-        own = {folder / n: c for n, c in calc_files(rerun.calc.record.data).items()}
-        _refuse_twice(rerun.calc.record.calc_id, own, printed)
+    data = [rerun.calc.record.data for rerun in reruns]
+    for record in data:
+        own = {folder / n: c for n, c in calc_files(record).items()}
+        _refuse_twice(record["calc"]["id"], own, printed)
         printed |= own
-    return printed
+    joined = {folder / n: content for n, content in joined_files(data).items()}
+    _refuse_twice("all calcs together", joined, printed)
+    return printed | joined
 
 
 def _superseded(reruns: Sequence[Rerun], folder: Path, files: Iterable[Path]) -> list[Path]:
@@ -146,7 +150,7 @@ def _superseded(reruns: Sequence[Rerun], folder: Path, files: Iterable[Path]) ->
 
     Left beside the new ones they would be taken for part of this issue.
     """
-    from lineproof.package import calc_file_names  # noqa: PLC0415 - 0.1 s
+    from lineproof.package import calc_file_names, joined_names  # noqa: PLC0415 - 0.1 s
 
     written = {path.name.casefold() for path in files}
     found: dict[Path, None] = {}
@@ -156,7 +160,9 @@ def _superseded(reruns: Sequence[Rerun], folder: Path, files: Iterable[Path]) ->
         except UserError:  # none, or not a record: nothing is known of an earlier issue
             continue
         for record in earlier:
-            for name in calc_file_names(record.data):
+            names = calc_file_names(record.data)
+            names += joined_names(record.data) if len(reruns) > 1 else []
+            for name in names:
                 if name.casefold() not in written and (folder / name).is_file():
                     found[folder / name] = None
     return list(found)

@@ -29,7 +29,7 @@ def file_name(calc_id: str) -> str:
 def calc_files(record: Mapping[str, Any]) -> dict[str, bytes]:
     """Return the files that a record's figures and tables ask for, by name."""
     return {
-        name: _table(record, entry) if ending == "csv" else _drawing(record, entry)
+        name: table_csv(calc_table(record, entry)) if ending == "csv" else _drawing(record, entry)
         for name, ending, entry in _asked(record)
     }
 
@@ -61,11 +61,11 @@ def _drawing(record: Mapping[str, Any], entry: Mapping[str, Any]) -> bytes:
     return dxf(replace(figure, shapes=(*figure.shapes, Text(below, words(told)))))
 
 
-def _table(record: Mapping[str, Any], entry: Mapping[str, Any]) -> bytes:
-    """Return a table as CSV, each row with its calc: tables of several beams are put together."""
+def calc_table(record: Mapping[str, Any], entry: Mapping[str, Any]) -> dict[str, Any]:
+    """Return a table with its calc in each row: tables of several beams are put together."""
     calc = record["calc"]["id"]
     rows = [[calc, *row] for row in entry["rows"]]
-    return table_csv({"columns": ["Calc", *entry["columns"]], "rows": rows})
+    return {"columns": ["Calc", *entry["columns"]], "rows": rows}
 
 
 def table_csv(entry: Mapping[str, Any]) -> bytes:

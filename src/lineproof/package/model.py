@@ -10,6 +10,7 @@ from lineproof.errors import FaultList, UserError
 from lineproof.package.calc import Calc, NotCovered, PartBlock, ProseBlock
 from lineproof.package.facts import FINAL_STATUSES, ProjectFacts, project_facts
 from lineproof.package.files import file_name
+from lineproof.package.joined import total_quantities
 from lineproof.package.merged import (
     NotCoveredBy,
     ScopeBox,
@@ -38,7 +39,7 @@ from lineproof.record.entry import CRITERIA, VALUES
 from lineproof.record.plain_data import json_text
 from lineproof.typeset.glyphs import has_missing, tree_has_missing
 from lineproof.typeset.nodes import EQUALS, Math, row
-from lineproof.typeset.rows import PrintedRow, notation_of, printed_row
+from lineproof.typeset.rows import PrintedRow, PrintedTable, notation_of, printed_row
 from lineproof.typeset.values import symbol_math, symbol_of, value_math
 
 Walk = Iterable[tuple[str, str]]
@@ -57,6 +58,7 @@ class Package:
     notation: tuple[NotationRow, ...]
     missing_glyphs: bool
     words: Words
+    quantities: PrintedTable | None = None
     reviews: tuple[PrintedReview, ...] = ()
 
     @property
@@ -140,6 +142,7 @@ def build_package(
         missing_glyphs=any(tree_has_missing(record) for record in data)
         or any(has_missing(review.text) for review in reviewed),
         words=words_of(record["kind_of_member"] for record in data),
+        quantities=total_quantities(data),
         reviews=tuple(reviewed),
     )
 
