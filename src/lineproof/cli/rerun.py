@@ -124,12 +124,18 @@ def report_changes(rerun: Rerun) -> list[str]:
 
 
 def failed_checks(record: Record) -> list[str]:
-    """Return a sentence per check that does not hold."""
-    sentences = []
-    for entry_id in record.failed:
-        entry = record.entries[entry_id]
-        accepted = entry.get("exception")
-        note = f", accepted by {accepted['initials']}" if accepted else ""
-        title = f" ({entry['title']})" if entry["title"] else ""
-        sentences.append(f"{record.calc_id}: check {entry_id}{title} does not hold{note}")
-    return sentences
+    """Return a sentence per check that does not hold, its line as the package numbers it."""
+    titles = {part["key"]: part["title"] for part in record.parts}
+    return [
+        _failed(record.calc_id, record.entries[entry_id], titles[entry_id.partition("/")[0]])
+        for entry_id in record.failed
+    ]
+
+
+def _failed(calc_id: str, entry: dict[str, Any], part: str) -> str:
+    where = f" ({part})" if part else ""
+    ratio = entry["printed"].get("utilisation")
+    told = f"; ratio {ratio}" if ratio else ""
+    accepted = entry.get("exception")
+    note = f"; accepted by {accepted['initials']}" if accepted else ""
+    return f"{calc_id}: {entry['label']} {entry['title'] or entry['formula']}{where} does not hold{told}{note}"
