@@ -133,9 +133,10 @@ def failed_checks(record: Record) -> list[str]:
 
 
 def _failed(calc_id: str, entry: dict[str, Any], part: str) -> str:
+    check = f"{entry['label']} {entry['title'] or entry['formula']}"
     where = f" ({part})" if part else ""
     ratio = entry["printed"].get("utilisation")
     told = f"; ratio {ratio}" if ratio else ""
     accepted = entry.get("exception")
     note = f"; accepted by {accepted['initials']}" if accepted else ""
-    return f"{calc_id}: {entry['label']} {entry['title'] or entry['formula']}{where} does not hold{told}{note}"
+    return f"{calc_id}: {check}{where} does not hold{told}{note}"
