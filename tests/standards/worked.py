@@ -266,6 +266,7 @@ BARS = (
     ),
     W("bars.AREA_OF_BARS", {"n_b": 4, "A_b": 500}, "4*500 = 2000", CHECK_5),
     W("bars.TOTAL_AREA", {"A_s1": 2000, "A_s2": 1000}, "2000 + 1000 = 3000"),
+    W("bars.STANDING_AREA", {"A_s1": 1500, "A_s2": 600}, "1500 + 600 = 2100"),
     W("cover.COVER_TO_BARS", {"c_c": 30, "d_bs": 11.3}, "30 + 11.3 = 41.3"),
     W(
         "cover.COVER_REQUIRED_STIRRUP",

@@ -222,3 +222,26 @@ def test_ties_of_15m_stand_on_whole_mm_where_five_leave_no_clear_space() -> None
     assert hook_at(bare, 1, "15M").s_tie == 48.0
     assert hook_at(bare, 1, "20M").s_tie == 55.0, "58.5 mm on the step of 5 mm"
     assert hook_at(bare_of(), 1, "15M").s_tie == 45.0, "ties of 10M need 41.3 mm"
+
+
+def test_two_layers_developed_in_part_are_counted_whole_for_cracks() -> None:
+    """A shallow band at a girder 250 mm wide: every bar that stands there counts for z.
+
+    The bars count in part by their groups; n = n_t + n_o + n_2, all of one size.
+    """
+    record = flow.run(flow.start(
+        spans=["4.6 m"], supports=["girder 250 mm", "wall 300 mm"], h="300 mm", b_w="480 mm",
+        shape="L", h_f="134 mm", spacing="2.7 m", tributary_width="1.2 m", f_c="35 MPa",
+        grade="500R", superimposed="2.7 kPa", use="library stack room", exposure="C-1",
+        cover="60 mm", slab_bars="2 x 10M at 300 mm",
+        loads=[{"type": "L", "span": 1, "point": "72 kN", "at": "3.89 m"},
+               {"type": "D", "span": 1, "point": "27 kN", "at": "2.52 m"}],
+    )).close()  # fmt: skip
+
+    face = {n.removeprefix("hog-1-right/"): e for n, e in record.entries.items()
+            if n.startswith("hog-1-right/")}  # fmt: skip
+    standing = sum(face[name]["value"] for name in ("n_t", "n_o", "n_2"))
+    assert face["n_z"]["value"] == standing
+    assert face["steel-for-moment"]["right"] < 200 * standing  # those that count for the moment
+    assert "hog-1-right/crack-control" not in record.failed
+    assert recompute(record) == []

@@ -126,6 +126,25 @@ def counted_in(made: Mapping[str, Entry]) -> dict[str, Entry]:
     return {"d": made["d"], "A_s": area} if area.value > 0 else {}
 
 
+def count_standing(steps: Steps, key: str) -> None:
+    """Let A_s be all bars at a section, for their number: a crack meets each, developed or not.
+
+    ``key`` is that of the part of the section, which is open. Of groups that count in part the
+    sum of all is recorded; several that count in full stand for all.
+    """
+    area = steps.sheet.part_entries.get("A_s")
+    parts = {part.key: part.entries for part in steps.sheet.parts}
+    made = parts.get(developed_key(key), {})
+    if area is None and any(name.startswith("A_sd") for name in made):
+        area = made["A_s1"]
+        last = sum(name.startswith("n_") for name in made)
+        for number in range(2, last + 1):
+            symbol = "A_sall" if number == last else f"A_sall{number - 1}"
+            area = steps.line(clause.STANDING_AREA, symbol, A_s1=area, A_s2=made[f"A_s{number}"])
+    if area is not None:
+        steps.bind(A_s=area)
+
+
 def record_developed_bars(
     model: Model,
     designed: Designed,

@@ -18,6 +18,7 @@ from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
     Developed,
     area_of,
+    count_standing,
     developed_key,
     record_developed_bars,
     same,
@@ -110,7 +111,7 @@ def record_sag(design: Design, span: int) -> None:
             minimum_of(
                 steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
             )
-            _count_standing(steps)
+            count_standing(steps, key)
             cracks_inside(steps, inputs.exposure, layers)
         if steps.decide(NEEDS_SKIN):
             side = design.side_bars(span, sag_at(design.designed, span))
@@ -317,7 +318,7 @@ def _record_face(
     )  # fmt: skip
     if inputs.slab:
         _check_spread(steps, top)
-    _count_standing(steps)
+    count_standing(steps, face.key)
     cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape])
     if steps.holds(NEEDS_SKIN):
         x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
@@ -325,13 +326,6 @@ def _record_face(
     _take(steps, _SHARED)
     made = dict(sheet.part_entries) | dict(counts) | {"A_s": steps.entry("A_s")}
     return {name: made[name] for name in _SHARED if name in made}
-
-
-def _count_standing(steps: Steps) -> None:
-    """Let A_s be the bars as they stand, for their number: a crack meets each, developed or not."""
-    standing = steps.sheet.part_entries.get("A_s")
-    if standing is not None:  # bars of several sizes have none: those that count stand for all
-        steps.bind(A_s=standing)
 
 
 def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:

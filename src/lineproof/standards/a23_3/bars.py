@@ -149,6 +149,12 @@ AREA_OF_BARS = _formula("A_s = n_b*A_b", title="Area of the bars", clause="G30.1
 TOTAL_AREA = _formula(
     "A_s = A_s1 + A_s2", title="Area of the bars", clause="G30.18", basis=MECHANICS
 )
+STANDING_AREA = _formula(
+    "A_sall = A_s1 + A_s2",
+    title="Area of the bars that stand here, developed or not",
+    clause="G30.18",
+    basis=MECHANICS,
+)
 
 FORMULAS = (
     LEAST_CLEAR,
@@ -160,6 +166,7 @@ FORMULAS = (
     DEPTH_ONE_LAYER,
     AREA_OF_BARS,
     TOTAL_AREA,
+    STANDING_AREA,
     TOP_AREA_T,
     TOP_AREA_L,
     TOP_AREA_RECTANGULAR,
