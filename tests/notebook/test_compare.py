@@ -45,6 +45,16 @@ def test_a_changed_value_is_named_with_both_numbers(stored: Record, again: Recor
     assert line.endswith("made again 470.25 kN.m")
 
 
+@pytest.mark.parametrize(("left", "count"), [(1e-12, 0), (1e-6, 1)])
+def test_the_remainder_of_a_balance_counts_against_what_it_is_compared_with(
+    stored: Record, again: Record, left: float, count: int
+) -> None:
+    """What balances to zero is 1e-12 kN.m on another processor: beside 456 no change."""
+    stored.entries["flexure/moment"]["left"] = 0.0
+    again.entries["flexure/moment"]["left"] = left
+    assert len(compare(stored, again)) == count
+
+
 def test_missing_and_added_lines_are_named(stored: Record, again: Record) -> None:
     moved = again.parts[1]["entries"].pop()
     assert said(stored, again) == [f"{moved['id']}: stored as holds, not made again"]

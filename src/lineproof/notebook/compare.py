@@ -11,7 +11,7 @@ from typing import Any
 from lineproof.quantity.units import internal_factor
 from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, FOUND, VALUES
-from lineproof.record.recompute import close
+from lineproof.record.recompute import REMAINDER, close
 
 Entry = Mapping[str, Any]
 
@@ -98,20 +98,25 @@ def _changes(entry_id: str, old: Entry, new: Entry) -> Iterator[Change]:
 
 
 def _sides(entry_id: str, old: Entry, new: Entry) -> Iterator[Change]:
+    # As in recomputing: what a balance leaves is rounding, and another processor leaves another.
+    larger = max(abs(entry[side]) for entry in (old, new) for side in ("left", "right"))
     for side in ("left", "right"):
-        if not _same(old, new, side):
+        if not _same(old, new, side, REMAINDER * larger):
             texts = [f"{entry[side]:.10g} {entry['unit']}".rstrip() for entry in (old, new)]
             yield Change(entry_id, f"{side} side", *texts)
     if old["holds"] != new["holds"]:
         yield Change(entry_id, "verdict", shown(old), shown(new))
 
 
-def _same(old: Entry, new: Entry, what: str) -> bool:
-    """Tell whether a number is the same; another printed unit is a difference of its own."""
+def _same(old: Entry, new: Entry, what: str, rounding: float = 0.0) -> bool:
+    """Tell whether a number is the same; another printed unit is a difference of its own.
+
+    ``rounding`` [printed unit] is what may differ besides the last bits.
+    """
     if old["unit"] != new["unit"]:
         return False
     scale = internal_factor(old["unit"])
-    return close(old[what] * scale, new[what] * scale)
+    return close(old[what] * scale, new[what] * scale, rounding * scale)
 
 
 def _short(*values: object) -> list[str]:
