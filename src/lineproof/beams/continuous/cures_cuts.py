@@ -27,7 +27,7 @@ from lineproof.beams.continuous.cutoff_ends import SideOf, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_record import cut_key, shear_key, side_key
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.detailing_bottom import SIDES
+from lineproof.beams.continuous.forces import ENDS
 from lineproof.beams.continuous.resistance_demand import stretch_at
 from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.beams.continuous.shear_stretches import stretches_of
@@ -64,7 +64,7 @@ def cut_of(design: Design, check: Entry) -> Cut | None:
 def _sides(design: Design) -> Iterator[tuple[str, SideOf]]:
     """Give the bars of every section towards every end, with the key of their part."""
     designed, runs = design.designed, design.runs
-    for number, end in product(range(1, len(designed.outline.supports) + 1), SIDES):
+    for number, end in product(range(1, len(designed.outline.supports) + 1), ENDS):
         if number <= len(designed.outline.lengths) and not designed.cantilever(number):
             yield side_key("bottom", number, end), bottom_side(designed, runs, number, end)
         if designed.forces.has_span(number, end):

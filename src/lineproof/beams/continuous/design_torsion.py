@@ -15,9 +15,10 @@ import numpy as np
 
 from lineproof.beams.choice import SIZES
 from lineproof.beams.continuous.anchorage import hook_part
-from lineproof.beams.continuous.detailing_bottom import SIDES, face_demand, face_tension
+from lineproof.beams.continuous.detailing_bottom import face_demand, face_tension
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars, TorsionForces
 from lineproof.beams.continuous.detailing_tips import tip_lacks
+from lineproof.beams.continuous.forces import ENDS
 from lineproof.beams.continuous.layout import Face
 from lineproof.beams.continuous.resistance import Standing, yield_force
 from lineproof.beams.continuous.shear_check import SpanCheck
@@ -186,7 +187,7 @@ def top_end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[
     With each the area of all its top bars [mm2] that would hold as much, developed as they are.
     """
     last = len(designed.outline.supports)
-    for near, support, span in zip(SIDES, (1, last), (1, last - 1), strict=True):
+    for near, support, span in zip(ENDS, (1, last), (1, last - 1), strict=True):
         layers = (*designed.bars.top[support - 1].web, *designed.bars.top[support - 1].spread)
         if not designed.exterior(support) or not layers:
             continue
@@ -213,7 +214,7 @@ def end_lacks(designed: Designed, standing: Sequence[Standing]) -> Iterator[tupl
     With each the area that must be anchored there [mm2].
     """
     last = len(designed.outline.supports)
-    for near, support, span in zip(SIDES, (1, last), (1, last - 1), strict=True):
+    for near, support, span in zip(ENDS, (1, last), (1, last - 1), strict=True):
         if not designed.exterior(support):
             continue
         there = [bars for bars in standing if bars.run.face == "bottom"]

@@ -45,7 +45,7 @@ from lineproof.beams.continuous.cutoff import (
 )
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_through import going_past, run_through
-from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.forces import ENDS, End
 from lineproof.beams.continuous.laps import lap_between, split
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.resistance import stand, yield_force
@@ -58,7 +58,6 @@ INTO_SUPPORT = 150.0
 """Length of bottom bars inside an interior support [mm] (12.11.1)."""
 LEAST_SAVED = 500.0
 """Bars are cut only where a cut saves this length at that end [mm]."""
-SIDES: tuple[End, End] = ("left", "right")
 
 
 @dataclass(frozen=True, slots=True)
@@ -128,10 +127,10 @@ def _lay_span(frame: Frame, span: int) -> tuple[BarRun, ...]:
     designed = frame.designed
     groups = groups_of(designed.bars.bottom[span - 1])
     groups = tuple(replace(run, serves=f"span {span}") for run in groups)
-    ends = {near: _anchored(designed, span, near, groups) for near in SIDES}
-    past = {near: going_past(designed, span, near, groups) for near in SIDES}
+    ends = {near: _anchored(designed, span, near, groups) for near in ENDS}
+    past = {near: going_past(designed, span, near, groups) for near in ENDS}
     runs = list(groups)
-    for near in SIDES:
+    for near in ENDS:
         t = support_end(designed, span, near)
         runs = [_ended(designed, span, near, run, t, ends[near].hook) for run in runs]
         for index in range(1, past[near] + 1):
@@ -139,7 +138,7 @@ def _lay_span(frame: Frame, span: int) -> tuple[BarRun, ...]:
             runs[index] = _ended(designed, span, near, runs[index], beyond)
     if designed.cantilever(span):
         return tuple(runs)
-    for near in SIDES:
+    for near in ENDS:
         runs = _cut_side(frame, span, near, runs, max(ends[near].running_in, past[near]))
     return tuple(runs)
 

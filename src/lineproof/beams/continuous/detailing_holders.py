@@ -6,9 +6,9 @@ from dataclasses import replace
 
 from lineproof.beams.continuous.anchored_ends import end_hook
 from lineproof.beams.continuous.cutoff import along, axis_of, ceil50, half_of, support_of
-from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES
+from lineproof.beams.continuous.detailing_bottom import CORNERS
 from lineproof.beams.continuous.detailing_data import Designed
-from lineproof.beams.continuous.forces import End
+from lineproof.beams.continuous.forces import ENDS, End
 from lineproof.beams.continuous.laps import lap_between
 from lineproof.beams.continuous.layout import BarRun, Hook
 from lineproof.beams.continuous.resistance import span_at
@@ -56,7 +56,7 @@ def with_holders(designed: Designed, corners: dict[int, BarRun]) -> list[BarRun]
 def _bare(designed: Designed, span: int) -> BarRun:
     start, end = (
         _outer(designed, span, near) if span in (1, len(designed.outline.lengths)) else 0.0
-        for near in SIDES
+        for near in ENDS
     )
     return BarRun("top", 1, CORNERS, designed.bars.holders, start, end, serves="holds the stirrups")
 
@@ -75,7 +75,7 @@ def _between(designed: Designed, span: int, corners: dict[int, BarRun]) -> BarRu
 
     The bars of a support may reach past the next one, where that has none.
     """
-    start, end = (_outer(designed, span, near) for near in SIDES)
+    start, end = (_outer(designed, span, near) for near in ENDS)
     before = [run for k, run in corners.items() if k <= span and run.end > start]
     after = [run for k, run in corners.items() if k > span and run.start < end]
     left = max(before, key=lambda run: run.end, default=None)

@@ -25,7 +25,7 @@ from lineproof.beams.continuous.cutoff_support import (
     record_section,
     record_zero_moment,
 )
-from lineproof.beams.continuous.detailing_bottom import SIDES
+from lineproof.beams.continuous.forces import ENDS
 from lineproof.beams.continuous.laps_record import record_crowded, record_laps
 from lineproof.beams.continuous.resistance import top_layers
 from lineproof.beams.continuous.resistance_cover import COUNT, Coverage
@@ -73,7 +73,7 @@ def _record_bottom(
         section = record_section(writers, layers, span, "bottom", title)
     if designed.cantilever(span):
         return
-    for near in SIDES:
+    for near in ENDS:
         side = bottom_side(designed, runs, span, near)
         own = side_key("bottom", span, near)
         site = Site(writers, frame, lengths, side, section, own, title)
@@ -87,7 +87,7 @@ def _record_bottom(
 
 def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, support: int) -> None:
     designed = writers.designed
-    for towards in SIDES:
+    for towards in ENDS:
         if not designed.forces.has_span(support, towards):
             continue
         side = top_side(designed, runs, support, towards)

@@ -33,7 +33,7 @@ from lineproof.beams.continuous.cutoff import (
     worst_between,
     zones_at,
 )
-from lineproof.beams.continuous.detailing_bottom import CORNERS, SIDES, placed
+from lineproof.beams.continuous.detailing_bottom import CORNERS, placed
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_holders import holder, joined, with_holders
 from lineproof.beams.continuous.detailing_meeting import (
@@ -45,7 +45,7 @@ from lineproof.beams.continuous.detailing_meeting import (
     with_restraint,
 )
 from lineproof.beams.continuous.detailing_tips import with_tip_hooks
-from lineproof.beams.continuous.forces import End, other
+from lineproof.beams.continuous.forces import ENDS, End, other
 from lineproof.beams.continuous.laps import lap_length, split
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import Standing, stand
@@ -144,7 +144,7 @@ def _reaches(frame: Frame, support: int) -> dict[End, Reach]:
     designed = frame.designed
     groups = groups_of(designed, support)
     reaches: dict[End, Reach] = {}
-    for side in SIDES:  # the side of the support that the span lies on
+    for side in ENDS:  # the side of the support that the span lies on
         if groups and designed.forces.has_span(support, side):
             span = support - 1 if side == "left" else support
             reaches[side] = _reach(frame, span, other(side), groups, long_of(groups))
@@ -171,7 +171,7 @@ def _placed_all(designed: Designed, support: int, reaches: dict[End, Reach]) -> 
     made = []
     for index, run in enumerate(groups):
         ended = run
-        for side in SIDES:
+        for side in ENDS:
             found = reaches.get(side)
             long = index < long_of(groups)
             t = None if found is None else (found.long if long else found.short)
@@ -182,7 +182,7 @@ def _placed_all(designed: Designed, support: int, reaches: dict[End, Reach]) -> 
 
 def _alike(designed: Designed, support: int, reaches: dict[End, Reach]) -> dict[End, Reach]:
     """Return the reaches, the larger on both sides where the spans are alike."""
-    if len(reaches) < len(SIDES):
+    if len(reaches) < len(ENDS):
         return reaches
     spans = (support - 1, support)
     if any(designed.cantilever(span) for span in spans):
