@@ -12,10 +12,11 @@ import mpmath
 import pytest
 from hypothesis import assume, given, settings
 from hypothesis import strategies as st
+from tests.formula.by_sympy import value_at
 
 from lineproof.errors import UserError
-from lineproof.formula import Binary, Call, Name, Negative, Number, Tree, formula, parse_expression
-from lineproof.formula.algebra import expression, partial_derivative, same, solve_for, value_at
+from lineproof.formula import Binary, Call, Name, Negative, Number, Tree, parse_expression
+from lineproof.formula.algebra import expression
 from lineproof.formula.compiled import compile_step, compile_tree, weave_tree
 
 NAMES = ("a", "b", "c")
@@ -211,7 +212,7 @@ def test_a_root_of_a_negative_number_never_hides() -> None:
 @pytest.mark.parametrize("text", ["sqrt(a)", "cbrt(a)", "a**0.5"])
 def test_roots_of_negative_numbers_are_refused(text: str) -> None:
     tree = parse_expression(text)
-    with pytest.raises(UserError, match="no real value"):
+    with pytest.raises(ValueError, match="no real value"):
         value_at(tree, {"a": -27.0})
     try:
         real = isinstance(compile_tree(tree, ["a"])(-27.0), float)
@@ -235,49 +236,5 @@ def test_a_symbol_may_be_called_like_a_function() -> None:
 
 
 def test_constants_are_exact_in_algebra() -> None:
-    assert same(parse_expression("0.1*x + 0.2*x"), parse_expression("0.3*x"))
-    assert same(parse_expression("(a + b)**2"), parse_expression("a*a + 2*a*b + b*b"))
-    assert not same(parse_expression("a + b"), parse_expression("a - b"))
-    assert not same(parse_expression("a"), parse_expression("a + b - b"))  # other arguments
-
-
-M_R = formula("M_r = phi_s*A_s*f_y*(d - A_s*phi_s*f_y/(2*k*b))", unit="kN.m")
-AT = {"phi_s": 0.85, "A_s": 2500.0, "f_y": 400.0, "d": 550.0, "k": 16.7, "b": 1900.0}
-
-
-@pytest.mark.parametrize("name", M_R.names)
-def test_partial_derivatives_equal_central_differences(name: str) -> None:
-    slope = partial_derivative(M_R, name)(*[AT[n] for n in M_R.names])
-    step = 1e-4 * AT[name]
-    ends = [
-        M_R.function(*[AT[n] + sign * step * (n == name) for n in M_R.names]) for sign in (1, -1)
-    ]
-    assert slope == pytest.approx((ends[0] - ends[1]) / (2 * step), rel=1e-6)
-
-
-def test_the_derivative_by_a_stranger_is_refused() -> None:
-    with pytest.raises(UserError, match="'x' is not one of phi_s, A_s"):
-        partial_derivative(M_R, "x")
-
-
-def test_solving_a_quadratic_takes_the_root_in_range() -> None:
-    # By hand: with K = phi f_y, M = K A d - (K A)^2/(2 k b); smaller root of the quadratic.
-    force = 0.85 * 400.0
-    moment = 4e8
-    a2, a1 = force**2 / (2 * 16.7 * 1900.0), force * 550.0
-    root = (a1 - math.sqrt(a1**2 - 4 * a2 * moment)) / (2 * a2)
-    values = {k: v for k, v in AT.items() if k != "A_s"}
-    found = solve_for(M_R, "A_s", moment, values, low=0.0, high=10_000.0)
-    assert found == pytest.approx(root, rel=1e-12)
-
-
-def test_solving_through_max() -> None:
-    clamped = formula("alpha_1 = max(0.85 - 0.0015*f_c, 0.67)", unit="")
-    # By hand: 0.85 - 0.0015 f = 0.8 gives f = 33.3...
-    found = solve_for(clamped, "f_c", 0.8, {}, low=20.0, high=80.0)
-    assert found == pytest.approx(100 / 3, rel=1e-9)
-
-
-def test_no_solution_in_the_range_is_said() -> None:
-    with pytest.raises(UserError, match="M_r: A_s has no solution between 0 and 10"):
-        solve_for(M_R, "A_s", 4e8, {k: v for k, v in AT.items() if k != "A_s"}, low=0.0, high=10.0)
+    """In floats 0.1 + 0.2 is 0.30000000000000004."""
+    assert expression(parse_expression("0.1*x + 0.2*x - 0.3*x")) == 0
