@@ -13,11 +13,13 @@ from lineproof.beams.analysis.arrangements import (
     factored_combinations,
     standard_arrangements,
 )
-from lineproof.beams.analysis.envelope import CaseSolution, Envelope, envelope, solve_cases
+from lineproof.beams.analysis.envelope import CaseSolution, Envelope, envelope
 from lineproof.beams.analysis.imported import Imported, read_forces, read_reactions
 from lineproof.beams.analysis.model import SIMPLE, Beam, Load, PointLoad, Span, UniformLoad
 from lineproof.beams.analysis.solve import solve
 from lineproof.errors import MOST_FAULTS, UserError
+
+from .solving import solve_cases
 
 LENGTHS = (8000.0, 6000.0)
 LOADS: list[Load] = [

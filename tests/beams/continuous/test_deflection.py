@@ -8,8 +8,8 @@ import numpy as np
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
+from tests.beams.analysis.solving import all_arrangements
 
-from lineproof.beams.analysis.arrangements import all_arrangements
 from lineproof.beams.analysis.model import (
     Beam,
     Load,

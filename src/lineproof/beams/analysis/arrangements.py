@@ -11,7 +11,6 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
-from itertools import product
 
 import numpy as np
 
@@ -110,16 +109,6 @@ def standard_arrangements(spans: int, *, beyond: bool = False) -> tuple[Arrangem
     if beyond:
         sets += [{*range(left, 0, -2), *range(left + 1, spans + 1, 2)} for left in numbers[:-1]]
     return tuple(dict.fromkeys(_named(s) for s in sets if s))
-
-
-def all_arrangements(spans: int) -> tuple[Arrangement, ...]:
-    """Return all 2^n ways to load n spans, for tests; at most 12 spans."""
-    if spans > 12:  # noqa: PLR2004 - 4096 arrangements
-        raise UserError(f"arrangements: 2^{spans} of them are too many; use the standard set")
-    return tuple(
-        _named(number for number, loaded in enumerate(choice, start=1) if loaded)
-        for choice in product((False, True), repeat=spans)
-    )
 
 
 def check_types(kinds: Iterable[str]) -> tuple[str, ...]:

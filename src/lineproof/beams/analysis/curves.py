@@ -24,7 +24,6 @@ Floats = NDArray[np.float64]
 Side = Literal["left", "right"]
 NEAR = 1e-9
 """Part of a span within which two stations are one."""
-_HALVINGS = 100
 
 
 @dataclass(frozen=True, eq=False, slots=True)
@@ -159,34 +158,6 @@ class Curves:
         return tuple(
             float(x) for x, (s, t) in zip(apart, pairwise(signs), strict=True) if s * t < 0
         )
-
-    def deflection_extremes(self, case: int = 0) -> tuple[tuple[float, float], tuple[float, float]]:
-        """Return (x, largest deflection) and (x, smallest), where the slope is zero or at an end.
-
-        Between two stations of zero moment the slope only rises or only falls: one zero at most.
-        """
-        ends = [0.0, *self.inflections(case), self.length]
-        stations = [*ends, *(x for a, b in pairwise(ends) for x in self._level(case, a, b))]
-        values = self.deflection(np.array(stations))[case]
-        low, high = int(values.argmin()), int(values.argmax())
-        return (stations[high], float(values[high])), (stations[low], float(values[low]))
-
-    def _level(self, case: int, a: float, b: float) -> list[float]:
-        first, last = self._slope_at(case, a), self._slope_at(case, b)
-        if first * last >= 0:
-            return []
-        for _ in range(_HALVINGS):
-            middle = (a + b) / 2
-            if middle in (a, b):
-                break
-            if self._slope_at(case, middle) * first > 0:
-                a = middle
-            else:
-                b = middle
-        return [(a + b) / 2]
-
-    def _slope_at(self, case: int, x: float) -> float:
-        return float(self.slope(np.array([x]))[case, 0])
 
 
 def _extremes(values: Floats, stations: Floats) -> Extremes:

@@ -6,19 +6,13 @@ shear method can take the pair of one case, and every governing value says which
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Literal
 
 import numpy as np
 
-from lineproof.beams.analysis.arrangements import (
-    Arrangement,
-    Cases,
-    Combination,
-    LoadCase,
-    cases_of,
-)
+from lineproof.beams.analysis.arrangements import LoadCase
 from lineproof.beams.analysis.curves import NEAR, Floats, Side
 from lineproof.beams.analysis.model import Beam
 from lineproof.beams.analysis.solve import Solution
@@ -94,14 +88,6 @@ class CaseSolution:
 
     solution: Solution
     cases: tuple[LoadCase, ...]
-
-
-def solve_cases(
-    solution: Solution, combinations: Iterable[Combination], arrangements: Iterable[Arrangement]
-) -> CaseSolution:
-    """Return the solution of every combination with every arrangement."""
-    cases: Cases = cases_of(solution.rows, combinations, arrangements)
-    return CaseSolution(solution.combined(cases.factors), cases.names)
 
 
 def stations_of(

@@ -26,26 +26,6 @@ _GAUSS = 1 / math.sqrt(3)
 
 
 @dataclass(frozen=True, eq=False, slots=True)
-class Residuals:
-    """What is left over where zero is due, as parts of the loads; the closing criteria.
-
-    ``force``: reactions less loads over the sum of loads. ``moment``: all moments about the right
-    end over the sum of loads times the length. ``level``: how far the curve integrated along a
-    span misses its right support and the slope beyond it, over the sum of loads times l^3/EI; after
-    redistribution the curve is not known and only statics are shown.
-    """
-
-    force: float
-    moment: float
-    level: float
-
-    @property
-    def largest(self) -> float:
-        """The largest of the three."""
-        return max(self.force, self.moment, self.level)
-
-
-@dataclass(frozen=True, eq=False, slots=True)
 class Solution:
     """A solved beam: one row a load type and span, or after :meth:`combined` one row a case.
 
@@ -81,10 +61,6 @@ class Solution:
     def total(self) -> Solution:
         """Return one case: all loads as given."""
         return self.combined(np.ones((1, len(self.rows))))
-
-    def residuals(self) -> Residuals:
-        """Return how well equilibrium and compatibility close, over all rows."""
-        return _residuals(self)
 
 
 def solve(beam: Beam, loads: Iterable[Load]) -> Solution:
@@ -255,41 +231,3 @@ def support_forces(beam: Beam, spans: Sequence[Curves]) -> tuple[Floats, Floats]
     turning = [i for i, s in enumerate(beam.supports) if s.kind in ("simple", "free")]
     couples[:, turning] = 0.0
     return reactions, couples
-
-
-def _residuals(solution: Solution) -> Residuals:
-    beam, spans = solution.beam, solution.spans
-    axes = np.array(beam.axes)
-    length = float(axes[-1])
-    loads = sum((curves.total for curves in spans), np.zeros(len(solution.rows)))
-    about = sum(
-        (c.load_moment(length - at) for c, at in zip(spans, axes[:-1], strict=True)),
-        np.zeros(len(solution.rows)),
-    )
-    force = solution.reactions.sum(axis=1) - loads
-    moment = solution.reactions @ (length - axes) + solution.couples.sum(axis=1) + about
-    size = sum(
-        float((np.abs(c.w) @ np.diff(c.breaks) + np.abs(c.P).sum(axis=1)).max()) for c in spans
-    )
-    size = size or 1.0
-    softest = max(c.length**3 / c.EI for c in spans)
-    return Residuals(
-        float(np.abs(force).max()) / size,
-        float(np.abs(moment).max() / (size * length)),
-        _off_level(solution) / (size * softest),
-    )
-
-
-def _off_level(solution: Solution) -> float:
-    """Return the worst miss of a support by an integrated curve [mm], or of its slope times l."""
-    worst = 0.0
-    if not np.isfinite(solution.rotations).all():
-        return worst
-    for i, curves in enumerate(solution.spans):
-        if solution.beam.supports[i + 1].kind == "free":
-            continue
-        end = np.array([curves.length])
-        turn = curves.slope(end)[:, 0] - solution.rotations[:, i + 1]
-        miss = np.abs(curves.deflection(end)[:, 0]) + np.abs(turn) * curves.length
-        worst = max(worst, float(miss.max()))
-    return worst
