@@ -7,6 +7,7 @@ from typing import Any
 
 import pytest
 import typst
+from tests.drawing.extent import extent
 
 from lineproof.beams.figures import (
     BarRow,
@@ -37,7 +38,7 @@ from lineproof.drawing import (
     to_json,
     words,
 )
-from lineproof.drawing.paper import PaperShape, Placed, extent, lower
+from lineproof.drawing.paper import PaperShape, Placed, lower
 
 # a floor beam: 25M bars of 25.2 mm in 10M stirrups of 11.3 mm, 40 mm cover
 T_BEAM = SectionShape("T", 380.0, 620.0, 3040.0, 140.0)

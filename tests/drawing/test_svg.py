@@ -9,6 +9,7 @@ from typing import Any
 
 import pytest
 import typst
+from tests.drawing.extent import extent
 
 from lineproof.drawing import (
     Arc,
@@ -25,7 +26,7 @@ from lineproof.drawing import (
 )
 from lineproof.drawing.hatch import hatch_lines
 from lineproof.drawing.metrics import printable, text_width
-from lineproof.drawing.paper import extent, lower
+from lineproof.drawing.paper import lower
 
 SVG = "{http://www.w3.org/2000/svg}"
 SQUARE = ((0.0, 0.0), (400.0, 0.0), (400.0, 400.0), (0.0, 400.0))

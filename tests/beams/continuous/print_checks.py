@@ -5,6 +5,7 @@ from __future__ import annotations
 from itertools import combinations, product
 
 from shapely import LineString, Point, Polygon
+from tests.drawing.extent import extent
 
 from lineproof.drawing import (
     Arc,
@@ -17,7 +18,7 @@ from lineproof.drawing import (
     from_json,
     to_json,
 )
-from lineproof.drawing.paper import PaperShape, Placed, extent, lower
+from lineproof.drawing.paper import PaperShape, Placed, lower
 
 LEAST_TEXT = 2.2
 """mm on paper."""
