@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from functools import cache
 
 import pytest
@@ -9,7 +10,7 @@ from tests.beams import gallery
 from tests.beams.continuous.flow import MIXED, record_of
 
 from lineproof.audit.data import Finding, Severity
-from lineproof.audit.search.traps import COVERED_BY, SLIP, TRAPS, trap_findings, traps_met
+from lineproof.audit.search.traps import TRAPS, trap_findings, traps_met
 from lineproof.audit.search.traps_view import Trap
 from lineproof.audit.slips.kinds import FAMILIES
 
@@ -19,6 +20,27 @@ from .trap_cases_service import LAID, LOADS, SERVICE, WHOLE
 from .trap_sheets import SHEETS, right
 
 CASES = (*SECTION, *SHEAR, *STIRRUPS, *LOADS, *WHOLE, *SERVICE, *LAID, *SHEETS)
+SLIP = "slip: "
+COVERED_BY: Mapping[tuple[int, str], str] = {
+    (6, "moment in kN.m with shear in N"): f"{SLIP}unit factor",
+    (30, "kPa used as kN/m"): f"{SLIP}unit factor",
+    (30, "half or full tributary width in a claim"): f"{SLIP}half or full tributary width",
+    (30, "clear for centre span in a claim"): f"{SLIP}clear for centre span",
+    (30, "simple span for continuous in a claim"): f"{SLIP}simple span for continuous",
+    (30, "moment at the axis in a claim"): f"{SLIP}centreline for face",
+    (30, "supports swapped in a claim"): f"{SLIP}left for right, or neighbouring place",
+    (30, "factored for specified in a claim"): f"{SLIP}factored for service",
+    (31, "one leg of the stirrups in a claim"): f"{SLIP}stirrup legs",
+    (31, "number of bars and their area in a claim"): f"{SLIP}bar count changed but not the area",
+    (31, "length of a cantilever in a claim"): f"{SLIP}clear for centre span",
+    (31, "calc and drawing at different revisions"): "drawing",
+    (28, "checks that another standard asks for, and this one too"): "missing",
+}
+"""Parts of traps that do not show in a record alone: the search that finds them.
+
+They show in the claims of another (``slip:`` and the kind that the slip finder tells), in a
+drawing, or in what is missing.
+"""
 
 
 @cache

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator
 
 from lineproof.audit.data import Effect, Finding, Severity
 from lineproof.audit.effects import RECORDED, effects_of_right, turned_sentence
@@ -34,27 +34,6 @@ TRAPS: tuple[Trap, ...] = tuple(
     )
 )
 """Every rule, by the number of its trap."""
-SLIP = "slip: "
-COVERED_BY: Mapping[tuple[int, str], str] = {
-    (6, "moment in kN.m with shear in N"): f"{SLIP}unit factor",
-    (30, "kPa used as kN/m"): f"{SLIP}unit factor",
-    (30, "half or full tributary width in a claim"): f"{SLIP}half or full tributary width",
-    (30, "clear for centre span in a claim"): f"{SLIP}clear for centre span",
-    (30, "simple span for continuous in a claim"): f"{SLIP}simple span for continuous",
-    (30, "moment at the axis in a claim"): f"{SLIP}centreline for face",
-    (30, "supports swapped in a claim"): f"{SLIP}left for right, or neighbouring place",
-    (30, "factored for specified in a claim"): f"{SLIP}factored for service",
-    (31, "one leg of the stirrups in a claim"): f"{SLIP}stirrup legs",
-    (31, "number of bars and their area in a claim"): f"{SLIP}bar count changed but not the area",
-    (31, "length of a cantilever in a claim"): f"{SLIP}clear for centre span",
-    (31, "calc and drawing at different revisions"): "drawing",
-    (28, "checks that another standard asks for, and this one too"): "missing",
-}
-"""Parts of traps that do not show in a record alone: the search that finds them.
-
-They show in the claims of another (``slip:`` and the kind that the slip finder tells), in a
-drawing, or in what is missing.
-"""
 
 
 def trap_findings(record: Record) -> tuple[Finding, ...]:
