@@ -127,11 +127,11 @@ def concrete_curve() -> Figure:
 
 
 FIGURES = {
-    "T": section(centroid=165.0),
+    "T": section(),
     "T two rows": section(bottom=TWO_ROWS, d=542.0),
     "small T": section(SMALL_T),
-    "L": section(L_BEAM, bottom=TWO_ROWS, d=542.0, centroid=230.0),
-    "rectangle": section(RECTANGLE, centroid=310.0),
+    "L": section(L_BEAM, bottom=TWO_ROWS, d=542.0),
+    "rectangle": section(RECTANGLE),
     "loading": loading(),
     "one load": loading(1, moment=(), reactions=((), ()), note=""),
     "block in flange": stresses(),
@@ -259,7 +259,7 @@ def test_sections_of_any_proportion(kind: Any, b_w: float, h: float) -> None:
     for h_f, b_f in product([90.0, 140.0], [700.0, 1500.0, 3040.0]):
         shape = SectionShape(kind, b_w, h, b_f, h_f)
         label = "10M stirrups at 250"
-        figure = section(shape, bottom=rows, stirrup_label=label, centroid=0.37 * h)
+        figure = section(shape, bottom=rows, stirrup_label=label)
         assert_fit_to_print(figure)
         for a in (12.0, 0.35 * h):
             d = h - 64.0

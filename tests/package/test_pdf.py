@@ -18,6 +18,8 @@ from lineproof.package import build_package, records_in_pdf, to_pdf
 from lineproof.package.pdf import PrintError, compile_pdf
 from lineproof.resources import folder
 
+from .noted import noted
+
 Record = dict[str, Any]
 
 
@@ -354,6 +356,7 @@ def test_the_place_of_the_seal_stands_on_one_page() -> None:
 
 def test_marks_are_printed_beside_their_line(record: Record) -> None:
     """A reviewer's note stands at the line it belongs to."""
-    text = text_of(printed(record, marks={"flexure/M_r": ["changed since revision A"]}))
+    review = noted({"flexure/M_r": ("changed since revision A",)})
+    text = text_of(printed(record, reviews=[review]))
 
     assert "Mark: changed since revision A" in text

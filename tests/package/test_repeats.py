@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import io
 import re
-from collections.abc import Mapping, Sequence
+from collections.abc import Sequence
 from typing import Any
 
 import pypdf
@@ -12,7 +12,10 @@ import pytest
 
 from lineproof.package import build_package, to_html, to_pdf
 from lineproof.package.calc import PartBlock
+from lineproof.package.reviewed import PrintedReview
 from lineproof.sheet import Sheet
+
+from .noted import noted
 
 Record = dict[str, Any]
 
@@ -32,9 +35,9 @@ def record_of(moments: Sequence[str], *, h: str = "500 mm") -> Record:
     return sheet.close().data
 
 
-def told(record: Record, marks: Mapping[str, Sequence[str]] | None = None) -> dict[str, str]:
+def told(record: Record, review: PrintedReview | None = None) -> dict[str, str]:
     """Return the label of every line that is told as a repeated one, and of the one it repeats."""
-    blocks = build_package([record], marks=marks).calcs[0].blocks
+    blocks = build_package([record], reviews=[review]).calcs[0].blocks
     return {
         same.row.label: same.label
         for block in blocks
@@ -104,7 +107,7 @@ def test_a_marked_line_is_worked_where_it_stands() -> None:
     """A note beside a line needs the line."""
     record = record_of(["90 kN.m", "90 kN.m"])
 
-    assert told(record, {"span-2/M_f": ["see drawing"]}) == {"3.1": "2.1", "3.3": "2.3"}
+    assert told(record, noted({"span-2/M_f": ("see drawing",)})) == {"3.1": "2.1", "3.3": "2.3"}
 
 
 @pytest.mark.parametrize(

@@ -148,13 +148,12 @@ def section_figure(
     top: Sequence[BarRow] = (),
     slab: SlabBars | None = None,
     skin: SkinBars | None = None,
-    centroid: float | None = None,
     caption: str = "Section",
 ) -> Figure:
     """Draw a section to scale with bars, stirrup and dimensions.
 
-    Lengths in mm; ``bottom`` and ``top`` name the outermost row first; ``centroid`` is the depth
-    of the gross centroid below the top face. The alternative text is written from the numbers.
+    Lengths in mm; ``bottom`` and ``top`` name the outermost row first. The alternative text is
+    written from the numbers.
     """
     content = _Content(d, cover, stirrup_diameter, stirrup_label, bottom, top, slab, skin)
     reach = (
@@ -171,7 +170,6 @@ def section_figure(
         *_steel(shape, shown, content),
         *_dimensions(shape, shown, content),
         *_callouts(shape, shown, content),
-        *_centroid(shape, shown, centroid, content.edge),
         _note(shown, (width / 2 - left) / shown.scale),
     ]
     return Figure(
@@ -286,19 +284,6 @@ def _named(
         shapes.append(Text(at, words(label), anchor="end" if left else "start"))
         shapes.append(Arrow(start, target, "text", THIN, 1.3))
     return shapes
-
-
-def _centroid(shape: SectionShape, shown: Shown, depth: float | None, edge: float) -> list[Shape]:
-    if depth is None:
-        return []
-    unit = 1.0 / shown.scale
-    y = shape.h - depth
-    room = (shape.b_w - 2.0 * edge) * shown.scale - 1.0
-    name = words("centroid") if text_width(words("centroid"), 2.6) < room else words("c.g.")
-    return [
-        Line((-2.5 * unit, y), (shape.b_w + 2.5 * unit, y), "centre", THIN, "chain"),
-        Text((shape.b_w / 2, y + 2.0 * unit), name, "centre", 2.6),
-    ]
 
 
 def _alt(shape: SectionShape, content: _Content) -> str:

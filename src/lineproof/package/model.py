@@ -108,14 +108,12 @@ class Package:
 def build_package(
     records: Sequence[Any],
     walks: Sequence[Walk | None] | None = None,
-    marks: Mapping[str, Sequence[str]] | None = None,
     reviews: Sequence[PrintedReview | None] = (),
 ) -> Package:
     """Build the package of one or several records of one project.
 
     ``records`` are records or their plain data; ``walks`` give each record's blocks (None: all
-    parts in order); ``marks`` are short notes printed beside the entry of that id; ``reviews``
-    give the review of each record, None for none.
+    parts in order); ``reviews`` give the review of each record, None for none.
     Raises :class:`UserError` with all faults of prose and anchors at once.
     """
     data = [_plain_data(record) for record in records]
@@ -126,7 +124,7 @@ def build_package(
     for place, (record, prefix) in enumerate(zip(data, _prefixes(data), strict=True)):
         walk = walks[place] if walks is not None else None
         review = reviews[place] if reviews else None
-        beside = _beside(marks or {}, review.notes if review is not None else {})
+        beside = review.notes if review is not None else {}
         calcs.append(_Builder(record, prefix, beside, faults).calc(walk))
         reviewed += [replace(review, anchor=prefix)] if review is not None else []
     facts = project_facts(
@@ -145,13 +143,6 @@ def build_package(
         quantities=total_quantities(data),
         reviews=tuple(reviewed),
     )
-
-
-def _beside(
-    marks: Mapping[str, Sequence[str]], notes: Mapping[str, Sequence[str]]
-) -> dict[str, tuple[str, ...]]:
-    """Return what stands beside each line: marks given, then notes of the review."""
-    return {line: (*marks.get(line, ()), *notes.get(line, ())) for line in [*marks, *notes]}
 
 
 def _check_status(status: str, calcs: Sequence[Calc], faults: FaultList) -> None:
@@ -191,7 +182,7 @@ class _Builder:
         self,
         record: Mapping[str, Any],
         prefix: str,
-        marks: Mapping[str, Sequence[str]],
+        marks: Mapping[str, tuple[str, ...]],
         faults: FaultList,
     ) -> None:
         self.record = record
@@ -235,7 +226,7 @@ class _Builder:
                 NotCovered(item["check"], item.get("clause", ""))
                 for item in status.get("not_covered", [])
             ),
-            marks={entry_id: tuple(notes) for entry_id, notes in self.marks.items()},
+            marks=self.marks,
             statements=() if front else tuple(r.text for r in rows if r.id.endswith("/bars-text")),
             front=tuple(front),
         )

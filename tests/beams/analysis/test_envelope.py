@@ -130,11 +130,11 @@ def test_the_governing_cases_of_three_spans_are_those_of_the_textbook() -> None:
     assert span_moment(solved, 1).case == LoadCase("1.25D + 1.5L", "live load on spans 1, 3")
     assert span_moment(solved, 2).case == LoadCase("1.25D + 1.5L", "live load on span 2")
     assert span_moment(solved, 2).beside == pytest.approx(0, abs=1e-6)
-    least = span_moment(solved, 2, largest=False)
-    assert (least.x, least.case.arrangement) == (0, "live load on spans 1, 2")
     found = envelope(solved)
     at_support = found.governing("M", largest=False)[found.marked("support", 2)[0]]
-    assert at_support.value == pytest.approx(least.value, rel=1e-12)
+    assert at_support.case.arrangement == "live load on spans 1, 2"
+    smallest = solved.solution.span(2).moment_extremes().smallest.min()
+    assert at_support.value == pytest.approx(smallest, rel=1e-12)
 
 
 def test_face_moments_are_less_than_at_the_axis() -> None:
@@ -207,16 +207,6 @@ def test_redistribution_keeps_statics(data: st.DataObject) -> None:
         assert np.allclose(
             change[:, 1], (change[:, 0] + change[:, 2]) / 2, rtol=0, atol=1e-9 * size
         )
-
-
-def test_redistribution_of_some_cases_leaves_the_others() -> None:
-    before = three_spans()
-    after = redistribute(before, {2: 10.0, 3: 10.0}, {2: 20.0, 3: 20.0}, only=[1])
-    same = [
-        np.array_equal(a, b)
-        for a, b in zip(before.solution.span(2).M0, after.solution.span(2).M0, strict=True)
-    ]
-    assert same == [i != 1 for i in range(len(before.cases))]
 
 
 @pytest.mark.parametrize(

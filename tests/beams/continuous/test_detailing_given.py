@@ -11,7 +11,6 @@ import pytest
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.detailing import lay_bars
-from lineproof.beams.continuous.detailing_data import SectionBars, SupportTop
 from lineproof.beams.continuous.detailing_given import beside_gap, read_given_runs, section_bars_of
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_cover import covered
@@ -75,20 +74,6 @@ def test_all_faults_at_once() -> None:
 def test_hooks_of_the_2024_edition_are_refused() -> None:
     with pytest.raises(UserError, match="write straight bars"):
         read_given_runs([row(hook_start="90")], BASIS, code_pair(PAIR_24))
-
-
-def test_a_section_that_needs_more_bars_than_stand_there() -> None:
-    sections = SectionBars(
-        ((BarLayer(4, "25M"),),), (SupportTop(), SupportTop((BarLayer(2, "20M"),))), "15M"
-    )
-    with pytest.raises(UserError) as told:
-        read_given_runs([GOOD], BASIS, PAIR, sections)
-    text = str(told.value)
-    assert "span 1: 4-25M asked for in layer 1 of the bottom bars, but 2-25M stand at 3500" in text
-    assert "support 2: 2-20M asked for in layer 1 of the top bars, but none stand at 6800" in text
-    more = [GOOD, row(start="1.2 m", end="5.8 m"),
-            row(face="top", bars="2-20M", start="5 m", end="7.15 m")]  # fmt: skip
-    assert len(read_given_runs(more, BASIS, PAIR, sections)) == 3
 
 
 def test_sections_are_read_from_the_runs() -> None:

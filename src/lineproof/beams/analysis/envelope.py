@@ -179,14 +179,11 @@ def envelope(
     return Envelope(stations, solved.cases, M, V)
 
 
-def span_moment(solved: CaseSolution, number: int, *, largest: bool = True) -> Governing:
-    """Return the largest or smallest moment of a span, at its exact station."""
+def span_moment(solved: CaseSolution, number: int) -> Governing:
+    """Return the largest moment of a span, at its exact station."""
     curves = solved.solution.span(number)
     found = curves.moment_extremes()
-    values, stations = (
-        (found.largest, found.x_largest) if largest else (found.smallest, found.x_smallest)
-    )
-    row = int(values.argmax() if largest else values.argmin())
-    x = float(stations[row])
+    row = int(found.largest.argmax())
+    x = float(found.x_largest[row])
     V = float(curves.shear(np.array([x]))[row, 0])
-    return Governing(float(values[row]), number, x, solved.cases[row], V)
+    return Governing(float(found.largest[row]), number, x, solved.cases[row], V)

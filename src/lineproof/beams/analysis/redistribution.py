@@ -8,7 +8,7 @@ passed in.
 
 from __future__ import annotations
 
-from collections.abc import Collection, Mapping
+from collections.abc import Mapping
 from dataclasses import replace
 
 import numpy as np
@@ -25,26 +25,20 @@ MOST = 20.0
 
 
 def redistribute(
-    solved: CaseSolution,
-    reductions: Mapping[int, float],
-    limits: Mapping[int, float],
-    only: Collection[int] | None = None,
+    solved: CaseSolution, reductions: Mapping[int, float], limits: Mapping[int, float]
 ) -> CaseSolution:
     """Return the cases with support moments reduced by ``reductions`` [%] by support number.
 
     A negative reduction raises them. ``limits`` [%] holds the limit of each of these supports.
     Only hogging moments change; both sides of a support change by the same part, so that a column
-    takes its couple in that part too. ``only`` names the cases (places in ``cases``), default all.
+    takes its couple in that part too.
     Raises :class:`UserError` with all faults. Deflections of the result are refused.
     """
     beam = solved.solution.beam
     check_reductions(beam, reductions, limits)
-    chosen = np.ones(len(solved.cases), dtype=bool)
-    if only is not None:
-        chosen = np.isin(np.arange(len(solved.cases)), sorted(only))
     spans = list(solved.solution.spans)
     for support, percent in reductions.items():
-        _change(spans, support, np.where(chosen, percent / 100, 0.0))
+        _change(spans, support, percent / 100)
     reactions, couples = support_forces(beam, spans)
     rotations = np.full_like(solved.solution.rotations, np.nan)
     solution = replace(
@@ -54,15 +48,15 @@ def redistribute(
     return CaseSolution(solution, solved.cases)
 
 
-def _change(spans: list[Curves], support: int, part: Floats) -> None:
+def _change(spans: list[Curves], support: int, part: float) -> None:
     """Take a part of the hogging moments at a support off both spans beside it."""
     before = spans[support - 2] if support > 1 else None
     after = spans[support - 1] if support <= len(spans) else None
-    part = np.where(_hogging(before, after), part, 0.0)
+    taken = np.where(_hogging(before, after), part, 0.0)
     if before is not None:
-        spans[support - 2] = _shifted(before, right=-part * before.end_moment)
+        spans[support - 2] = _shifted(before, right=-taken * before.end_moment)
     if after is not None:
-        spans[support - 1] = _shifted(after, left=-part * after.M0)
+        spans[support - 1] = _shifted(after, left=-taken * after.M0)
 
 
 def _hogging(before: Curves | None, after: Curves | None) -> NDArray[np.bool_]:

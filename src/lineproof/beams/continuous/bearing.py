@@ -10,7 +10,6 @@ from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.shear_numbers import ShearBasis
 from lineproof.beams.steps import Steps
 from lineproof.formula import FROM_MEMORY
-from lineproof.record import Entry
 from lineproof.standards.a23_3 import bearing, shear_bars
 
 _HANGERS = (
@@ -44,13 +43,12 @@ def record_hangers(steps: Steps, number: int) -> None:
     steps.check(shear_bars.HANGERS_PROVIDED)
 
 
-def record_bearing(steps: Steps, A_2: Entry | None = None) -> None:
+def record_bearing(steps: Steps) -> None:
     """Record inside the open part the bearing of the beam on its support.
 
-    Needs R_f, b_w and the length of the bearing l_b in place. Without ``A_2`` the supporting
-    surface counts no larger than the loaded area.
+    Needs R_f, b_w and the length of the bearing l_b in place. The supporting surface counts no
+    larger than the loaded area.
     """
-    A_1 = steps.line(bearing.LOADED_AREA)
-    steps.bind(A_2=A_1 if A_2 is None else A_2)
+    steps.bind(A_2=steps.line(bearing.LOADED_AREA))
     steps.line(bearing.RESISTANCE)
     steps.check(bearing.STRENGTH)

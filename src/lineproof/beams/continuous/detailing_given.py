@@ -36,12 +36,9 @@ _BARS = re.compile(r"\s*(\d{1,2})\s*-\s*(\d{2}M)\s*\Z", re.IGNORECASE)
 
 
 def read_given_runs(
-    rows: Sequence[Mapping[str, Any]],
-    basis: Basis,
-    pair: CodePair,
-    sections: SectionBars | None = None,
+    rows: Sequence[Mapping[str, Any]], basis: Basis, pair: CodePair
 ) -> tuple[BarRun, ...]:
-    """Read runs of bars and check them against the beam, and against its sections if given.
+    """Read runs of bars and check them against the beam.
 
     A row is for example ``{"face": "bottom", "bars": "2-25M", "start": "-0.15 m", "end":
     "7.75 m"}``, with ``layer`` 2, ``place`` ``overhang`` or ``side face`` (skin bars, half at each
@@ -60,8 +57,6 @@ def read_given_runs(
     faults.raise_if_any()
     runs = tuple(made)
     _check_layers(runs, basis, faults)
-    if sections is not None:
-        _check_sections(runs, basis.outline, sections, faults)
     faults.raise_if_any()
     return runs
 
@@ -202,33 +197,6 @@ def _fault_of_layer(row: list[BarRun], basis: Basis, x: float) -> str:
             f"at least {least:.0f} mm; write fewer bars there{second}"
         )
     return ""
-
-
-def _check_sections(
-    runs: tuple[BarRun, ...], outline: BeamOutline, sections: SectionBars, faults: FaultList
-) -> None:
-    """Refuse sections that name more bars than stand there."""
-    for span, layers in enumerate(sections.bottom, start=1):
-        middle = sum(outline.faces(span)) / 2
-        _check_section(f"span {span}", runs, "bottom", middle, layers, faults)
-    for support, top in enumerate(sections.top, start=1):
-        x = top_section(outline, support)
-        _check_section(f"support {support}", runs, "top", x, top.web, faults)
-
-
-def _check_section(
-    name: str, runs: tuple[BarRun, ...], face: Face, x: float, layers: BarLayers, faults: FaultList
-) -> None:
-    for number, layer in enumerate(layers, start=1):
-        there = [r for r in at_section(runs, face, x) if r.layer == number and r.place == "web"]
-        found = sum(r.area for r in there)
-        if found < layer.area * (1 - 1e-9):
-            shown = " + ".join(f"{r.number}-{r.size}" for r in there) or "none"
-            faults.add(
-                f"{name}: {layer} asked for in layer {number} of the {face} bars, but {shown} "
-                f"stand at {x:.0f} mm from the axis of support 1; write a run of bars that passes "
-                "there, or fewer bars for the section"
-            )
 
 
 def tail_cover(outline: BeamOutline, runs: Iterable[BarRun]) -> float:
