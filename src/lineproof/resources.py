@@ -1,14 +1,12 @@
 """Where the templates and the shipped calcs lie: at the root of a checkout, else in the package.
 
-Also how a file of the user is opened, and read as text.
+Also how a file of the user is read.
 """
 
 from __future__ import annotations
 
-import errno
 import stat
 from pathlib import Path
-from typing import BinaryIO
 
 from lineproof.errors import UserError
 
@@ -26,15 +24,30 @@ def folder(name: str) -> Path:
     return _PACKAGE / name
 
 
-def open_file(path: Path) -> BinaryIO:
-    """Open a file to read its bytes; raises :class:`OSError`, also for a pipe or a device.
+def read_file(
+    path: Path,
+    most: int,
+    advice: str = "not read",
+    absent: str = "cannot be read (No such file or directory)",
+) -> bytes:
+    """Return the content of a file of at most ``most`` bytes; raises :class:`UserError`.
 
-    A pipe may wait for ever for who writes into it, and a device may never end.
+    A pipe or a device is refused: the one may wait for ever for who writes into it, the other may
+    never end. ``advice`` is what to do with a larger file, ``absent`` what is said of none.
     """
-    mode = path.stat().st_mode
-    if not (stat.S_ISREG(mode) or stat.S_ISDIR(mode)):
-        raise OSError(errno.EINVAL, "a pipe or a device; give a saved file", str(path))
-    return path.open("rb")
+    try:
+        mode = path.stat().st_mode
+        if not (stat.S_ISREG(mode) or stat.S_ISDIR(mode)):
+            raise UserError(f"{path}: cannot be read (a pipe or a device; give a saved file)")
+        with path.open("rb") as stream:
+            content = stream.read(most + 1)
+    except FileNotFoundError:
+        raise UserError(f"{path}: {absent}") from None
+    except OSError as error:
+        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
+    if len(content) > most:
+        raise UserError(f"{path}: larger than {most // 1_000_000} MB; {advice}")
+    return content
 
 
 def csv_text(content: bytes, name: str) -> str:

@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING
 from lineproof.cli.lines import MOST_NAMED
 from lineproof.errors import UserError
 from lineproof.notebook.records import LARGEST_FILE, read_records
-from lineproof.resources import open_file
+from lineproof.resources import read_file
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
@@ -45,14 +45,7 @@ def _content(path: Path) -> bytes:
     """Read a package, never more than one could hold."""
     if path.suffix.lower() not in _KINDS:
         raise UserError(f"{path}: not a printed package; give one of {', '.join(_KINDS)}")
-    try:
-        with open_file(path) as stream:
-            content = stream.read(LARGEST_FILE + 1)
-    except OSError as error:
-        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
-    if len(content) > LARGEST_FILE:
-        raise UserError(f"{path}: larger than {LARGEST_FILE // 1_000_000} MB; not read")
-    return content
+    return read_file(path, LARGEST_FILE)
 
 
 def _sources(path: Path) -> list[Source]:

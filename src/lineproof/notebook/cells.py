@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import Any
 
 from lineproof.errors import UserError
-from lineproof.resources import open_file
+from lineproof.resources import read_file
 
 PARAMETERS = "parameters"
 LEFT_OUT = "remove-cell"
@@ -40,13 +40,7 @@ class Cell:
 
 def load_notebook(path: Path) -> dict[str, Any]:
     """Read a notebook file as plain JSON data; raises :class:`UserError`."""
-    try:
-        with open_file(path) as stream:
-            content = stream.read(LARGEST_NOTEBOOK + 1)
-    except OSError as error:
-        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
-    if len(content) > LARGEST_NOTEBOOK:
-        raise UserError(f"{path}: larger than {LARGEST_NOTEBOOK // 1_000_000} MB; not read")
+    content = read_file(path, LARGEST_NOTEBOOK)
     try:
         data = json.loads(content)
     except (ValueError, RecursionError):

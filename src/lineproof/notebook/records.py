@@ -7,9 +7,10 @@ from pathlib import Path
 
 from lineproof.errors import UserError
 from lineproof.record import Record
-from lineproof.resources import open_file
+from lineproof.resources import read_file
 
 LARGEST_FILE = 64_000_000
+"""More than any package holds."""
 
 
 def altered_lines(record: Record) -> list[str]:
@@ -35,8 +36,6 @@ def read_records(path: Path) -> list[Record]:
         raise UserError(f"{path}: not a file with lines; give one of {', '.join(readers)}")
     try:
         return reader(path)
-    except OSError as error:
-        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
     except UnicodeDecodeError:
         raise UserError(f"{path}: not UTF-8 text; give a file that lineproof has made") from None
     except UserError as error:
@@ -51,26 +50,19 @@ def _from_notebook(path: Path) -> list[Record]:
     return [record_of(cells_of(load_notebook(path), str(path)), str(path))]
 
 
-def _content(path: Path) -> bytes:
-    """Read a file, never more than a package could hold."""
-    with open_file(path) as stream:
-        content = stream.read(LARGEST_FILE + 1)
-    if len(content) > LARGEST_FILE:
-        raise UserError(f"{path}: larger than {LARGEST_FILE // 1_000_000} MB; not read")
-    return content
-
-
 def _from_pdf(path: Path) -> list[Record]:
     from lineproof.package import records_in_pdf  # noqa: PLC0415 - by kind of file
 
-    return [Record.from_data(data) for data in records_in_pdf(_content(path))]
+    return [Record.from_data(data) for data in records_in_pdf(read_file(path, LARGEST_FILE))]
 
 
 def _from_html(path: Path) -> list[Record]:
     from lineproof.package import records_in_html  # noqa: PLC0415 - by kind of file
 
-    return [Record.from_data(data) for data in records_in_html(_content(path).decode())]
+    return [
+        Record.from_data(data) for data in records_in_html(read_file(path, LARGEST_FILE).decode())
+    ]
 
 
 def _from_json(path: Path) -> list[Record]:
-    return [Record.from_text(_content(path).decode())]
+    return [Record.from_text(read_file(path, LARGEST_FILE).decode())]

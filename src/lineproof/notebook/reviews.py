@@ -9,10 +9,15 @@ from lineproof.errors import UserError
 from lineproof.notebook.records import LARGEST_FILE
 from lineproof.package.reviewed import REVIEW_SUFFIX, PrintedReview
 from lineproof.record import Record
-from lineproof.resources import open_file
+from lineproof.resources import read_file
 
 if TYPE_CHECKING:
     from lineproof.audit.review.data import Review
+
+_NO_REVIEW = (
+    "no such file; open the HTML package in a browser, choose Review, mark lines, and save the "
+    "file there, or name it with --marks FILE"
+)
 
 
 def beside(calc: Path) -> Path:
@@ -55,17 +60,9 @@ def read_review_file(path: Path) -> Review:
     """Read a review from its file; raises :class:`UserError` that names the file."""
     from lineproof.audit.review.read import read_review  # noqa: PLC0415 - 0.1 s
 
+    content = read_file(path, LARGEST_FILE, absent=_NO_REVIEW)
     try:
-        with open_file(path) as stream:
-            content = stream.read(LARGEST_FILE + 1)
         text = content.decode("utf-8-sig")
-    except FileNotFoundError:
-        raise UserError(
-            f"{path}: no such file; open the HTML package in a browser, choose Review, mark lines, "
-            "and save the file there, or name it with --marks FILE"
-        ) from None
-    except OSError as error:
-        raise UserError(f"{path}: cannot be read ({error.strerror})") from None
     except UnicodeDecodeError:
         raise UserError(
             f"{path}: not UTF-8 text; give the file that the review page saved"

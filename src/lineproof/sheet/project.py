@@ -11,6 +11,7 @@ from typing import Any
 
 from lineproof.errors import UserError
 from lineproof.record.plain_data import LARGEST_INTEGER
+from lineproof.resources import read_file
 
 KNOWN: dict[str, tuple[str, ...]] = {
     "project": ("name", "number", "address", "client"),
@@ -40,18 +41,12 @@ def read_project(path: Path) -> dict[str, Any]:
 
     Raises :class:`UserError` that names file, line and what to write.
     """
+    content = read_file(path, LARGEST_FILE, "a project file holds facts only")
     try:
-        with path.open("rb") as stream:
-            content = stream.read(LARGEST_FILE + 1)
-        if len(content) > LARGEST_FILE:
-            raise UserError(f"{path}: larger than 1 MB; a project file holds facts only")
         data = tomllib.loads(content.decode("utf-8-sig"))  # some editors put a mark in front
-    except (OSError, UnicodeDecodeError) as error:
-        reason = getattr(error, "strerror", None) or "not UTF-8 text"
-        raise UserError(f"{path}: the project file cannot be read ({reason})") from None
+    except UnicodeDecodeError:
+        raise UserError(f"{path}: cannot be read (not UTF-8 text)") from None
     except (ValueError, RecursionError) as error:
-        if isinstance(error, UserError):
-            raise
         raise UserError(f"{path}: not valid TOML: {error}") from None
     _check_values(path, data)
     facts: dict[str, Any] = _plain(data)

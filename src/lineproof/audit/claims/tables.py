@@ -18,7 +18,7 @@ from lineproof.audit.claims.workbooks import read_workbook, workbook_bytes
 from lineproof.errors import FileFaults, UserError
 from lineproof.package.csv_tables import STARTS_A_FORMULA, csv_bytes, safe_cell
 from lineproof.quantity import echo
-from lineproof.resources import csv_text, open_file
+from lineproof.resources import csv_text, read_file
 
 MOST_BYTES = 20_000_000
 MOST_ROWS = 20_000
@@ -77,22 +77,11 @@ def read_with_faults(path: Path) -> tuple[Table, TableFaults]:
         raise UserError(f"{name}: a workbook that may hold macros; save it as .xlsx without them")
     if ending not in (CSV, XLSX):
         raise UserError(f"{name}: neither .csv nor .xlsx; save the table as one of them")
-    content = _content(path, name)
+    content = read_file(path, MOST_BYTES, "keep the claims alone")
     if not content.strip():
         raise UserError(f"{name}: the file is empty; let 'lineproof audit --blank' write a table")
     raw = read_workbook(content, name) if ending == XLSX else _csv_rows(content, name)
     return _table(name, raw)
-
-
-def _content(path: Path, name: str) -> bytes:
-    try:
-        with open_file(path) as stream:
-            content = stream.read(MOST_BYTES + 1)
-    except OSError as error:
-        raise UserError(f"{name}: cannot be read ({error.strerror})") from None
-    if len(content) > MOST_BYTES:
-        raise UserError(f"{name}: larger than {MOST_BYTES // 1_000_000} MB; keep the claims alone")
-    return content
 
 
 def _csv_rows(content: bytes, name: str) -> Iterator[list[str]]:
