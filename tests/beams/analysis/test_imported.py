@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from pathlib import Path
 
 import numpy as np
 import pytest
@@ -169,26 +168,10 @@ def test_a_wrong_heading_is_named(header: str, words: str) -> None:
         (HEADER.encode() + b"\n1,0,a\0b,A,0,0,0", "holds zero bytes"),
         (HEADER.encode() + b"\n" + b"1" * 2000, "line 2 is longer than 1000 characters"),
         (HEADER.encode() + b"\n1" * 200_001, "200002 lines, more than 200000"),
-        (b"x" * 20_000_001, "larger than 20 MB"),
     ],
 )
 def test_what_is_no_table_is_refused(content: bytes, words: str) -> None:
     assert any(words in fault for fault in faults(lambda: read_forces(content, LENGTHS)))
-
-
-def test_files_are_read_from_disk_and_a_missing_one_is_named(tmp_path: Path) -> None:
-    path = tmp_path / "forces.csv"
-    path.write_bytes(as_csv(rows()))
-    assert len(read_forces(path, LENGTHS).envelope.cases) == len(own()[0].cases)
-    for wrong in (tmp_path / "none.csv", tmp_path):
-        assert faults(lambda wrong=wrong: read_forces(wrong, LENGTHS)) == ("forces: no such file",)  # type: ignore[misc]
-
-
-def test_a_huge_file_is_not_read_whole(tmp_path: Path) -> None:
-    path = tmp_path / "huge.csv"
-    with path.open("wb") as stream:
-        stream.truncate(50_000_000_000)  # sparse
-    assert "larger than 20 MB" in faults(lambda: read_forces(path, LENGTHS))[0]
 
 
 def test_no_more_than_forty_faults_are_listed() -> None:

@@ -417,6 +417,14 @@ def test_a_path_that_is_none_is_refused(given: Any, words: str) -> None:
     assert words in found[0]
 
 
+def test_a_huge_file_is_not_read_whole(tmp_path: Path) -> None:
+    path = tmp_path / "huge.csv"
+    with path.open("wb") as stream:
+        stream.truncate(50_000_000_000)  # sparse
+    (found,) = refused(lambda: start(forces_csv=str(path)))
+    assert found.endswith("is larger than 20 MB; export fewer cases")
+
+
 def test_all_faults_come_at_once(files: dict[str, Any]) -> None:
     path = changed_file(files, with_cell(5, 4, "=1+1"))
     found = refused(

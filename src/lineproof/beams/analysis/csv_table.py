@@ -10,7 +10,6 @@ import csv
 import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
-from pathlib import Path
 from typing import Literal
 
 from lineproof.errors import FileFaults, UserError
@@ -20,7 +19,6 @@ from lineproof.resources import csv_text
 Cell = str | float
 Kind = Literal["text", "number", "count"]
 
-MOST_BYTES = 20_000_000
 MOST_LINES = 200_000
 LONGEST_LINE = 1_000
 LONGEST_NAME = 80
@@ -50,13 +48,13 @@ class Line:
     cells: tuple[Cell, ...]
 
 
-def read_table(source: Path | bytes, name: str, columns: Sequence[Column]) -> list[Line]:
+def read_table(content: bytes, name: str, columns: Sequence[Column]) -> list[Line]:
     """Return the rows of a CSV file; a column left out that is not needed reads as zero.
 
     ``name`` stands for the file in messages. Raises :class:`UserError` with all faults.
     """
     faults = FileFaults(name)
-    rows = _rows(_text(source, name), name)
+    rows = _rows(csv_text(content, name), name)
     header = next(rows, None)
     if header is None:
         raise UserError(f"{name}: the file is empty; write {_sample(columns)} on its first line")
@@ -73,17 +71,6 @@ def read_table(source: Path | bytes, name: str, columns: Sequence[Column]) -> li
         faults.add("no rows under the headings")
     faults.raise_if_any()
     return made
-
-
-def _text(source: Path | bytes, name: str) -> str:
-    if isinstance(source, Path):
-        if not source.is_file():
-            raise UserError(f"{name}: no such file")
-        with source.open("rb") as stream:
-            source = stream.read(MOST_BYTES + 1)
-    if len(source) > MOST_BYTES:
-        raise UserError(f"{name}: larger than {MOST_BYTES // 1_000_000} MB; export fewer cases")
-    return csv_text(source, name)
 
 
 def _rows(text: str, name: str) -> Iterator[tuple[int, list[str]]]:

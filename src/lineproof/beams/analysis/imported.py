@@ -19,7 +19,6 @@ from collections import Counter, defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
-from pathlib import Path
 
 import numpy as np
 from numpy.typing import NDArray
@@ -86,7 +85,7 @@ Table = Mapping[LoadCase, Mapping[int, Sequence[Ordinate]]]
 
 
 def read_forces(
-    source: Path | bytes,
+    content: bytes,
     lengths: Sequence[float],
     *,
     breaks: Mapping[int, Sequence[float]] | None = None,
@@ -98,7 +97,7 @@ def read_forces(
     known to change [mm], each of which must be a station of the file.
     """
     faults = FileFaults(name)
-    table = _table(read_table(source, name, FORCES), lengths, faults)
+    table = _table(read_table(content, name, FORCES), lengths, faults)
     faults.raise_if_any()
     _check_once(table, faults)
     _check_signs(table, faults)
@@ -291,7 +290,7 @@ def _imported(table: Table, lengths: Sequence[float]) -> Imported:
 
 
 def read_reactions(
-    source: Path | bytes,
+    content: bytes,
     forces: Imported,
     *,
     name: str = "reactions",
@@ -302,7 +301,7 @@ def read_reactions(
     :class:`UserError` with all faults.
     """
     faults = FileFaults(name)
-    found = _by_support(read_table(source, name, REACTIONS), faults)
+    found = _by_support(read_table(content, name, REACTIONS), faults)
     jumps = dict(_jumps(forces.envelope))
     for case, support in found.keys() - jumps.keys():
         faults.add(f"{case}, support {support}: no such case or support in the forces")

@@ -9,13 +9,13 @@ from typing import Any
 
 import numpy as np
 
-from lineproof.beams.analysis.csv_table import MOST_BYTES
 from lineproof.beams.analysis.imported import TOLERANCE, Imported, read_forces, read_reactions
 from lineproof.beams.continuous.imported_forces import ForcesFile
 from lineproof.beams.continuous.typed_beam import TypedLoad, TypedSupport
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed, echo
 
+MOST_BYTES = 20_000_000
 _LONGEST_PATH = 1000
 
 
