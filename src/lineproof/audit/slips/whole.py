@@ -106,10 +106,11 @@ def _by_simple(line: Line, load: str, span: str, text: str) -> str:
     return f"{symbols[load]}*{symbols[span]}{text} ({simple}), of {first} and {second}"
 
 
-def _over(line: Line, depth: int = 3) -> list[str]:
+def _over(line: Line) -> list[str]:
+    """Return the values up to three lines above, the nearest first."""
     reached: dict[str, None] = {}
     edge = [line.node.id]
-    for _ in range(depth):
+    for _ in range(3):
         edge = [a for e in edge for a in line.scope.graph.sources[e] if a in line.scope.units]
         reached |= dict.fromkeys(edge)
     return list(reached)

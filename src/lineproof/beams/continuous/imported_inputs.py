@@ -145,8 +145,9 @@ def _breaks(loads: Sequence[TypedLoad]) -> dict[int, list[float]]:
     made: dict[int, list[float]] = {}
     for load in loads:
         for place in (load.at, load.start, load.end):
-            for span in load.spans if place is not None else ():
-                made.setdefault(span, []).append(place.value)  # type: ignore[union-attr]
+            if place is not None:
+                for span in load.spans:
+                    made.setdefault(span, []).append(place.value)
     return made
 
 

@@ -101,7 +101,7 @@ def spans_counted(given: object) -> int:
 def read_depths(name: str, given: object, spans: int) -> tuple[Typed, ...]:
     """Read one overall depth for all spans, or one a span."""
     if not isinstance(given, list | tuple):
-        return (read_in_range(name, given, DEPTH),) * spans  # type: ignore[arg-type]
+        return (read_in_range(name, given, DEPTH),) * spans  # type: ignore[arg-type]  # refused there
     faults = FaultList()
     if len(given) != spans:
         faults.add(f"{name}: {len(given)} depths for {spans} spans; write one, or one a span")
