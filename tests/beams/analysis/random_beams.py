@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from hypothesis import settings
 from hypothesis import strategies as st
 
@@ -60,3 +62,14 @@ def beams(draw: st.DrawFn) -> Beam:
     if not held or (len(held) == 1 and held[0].kind == "simple"):
         supports[0] = fixed
     return Beam(spans, tuple(supports))
+
+
+def turned(beam: Beam, load: Load) -> Load:
+    """Return a load as seen from the other side."""
+    number = len(beam.spans) + 1 - load.span
+    length = beam.spans[load.span - 1].length
+    if isinstance(load, PointLoad):
+        return replace(load, span=number, at=length - load.at)
+    if isinstance(load, PartialLoad):
+        return replace(load, span=number, start=length - load.end, end=length - load.start)
+    return replace(load, span=number)

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import numpy as np
 import pytest
 from hypothesis import given
@@ -24,7 +22,7 @@ from lineproof.beams.analysis.model import (
 )
 from lineproof.beams.analysis.solve import Solution, solve
 
-from .random_beams import beams, loads_on, repeatable
+from .random_beams import beams, loads_on, repeatable, turned
 from .solving import largest_residual
 
 L = 1000.0
@@ -266,17 +264,6 @@ def test_the_mirrored_beam_gives_the_mirrored_curves(data: st.DataObject) -> Non
             assert np.allclose(first, second, rtol=0, atol=1e-8 * size + 1e-9)
         V, W = here.shear(x, "left"), -there.shear(here.length - x, "right")
         assert np.allclose(V[0, 1:], W[0, 1:], rtol=1e-9, atol=1e-3)
-
-
-def turned(beam: Beam, load: Load) -> Load:
-    """Return a load as seen from the other side."""
-    number = len(beam.spans) + 1 - load.span
-    length = beam.spans[load.span - 1].length
-    if isinstance(load, PointLoad):
-        return replace(load, span=number, at=length - load.at)
-    if isinstance(load, PartialLoad):
-        return replace(load, span=number, start=length - load.end, end=length - load.start)
-    return replace(load, span=number)
 
 
 @repeatable

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import numpy as np
 import pytest
 from hypothesis import given
@@ -20,7 +18,7 @@ from lineproof.beams.analysis.model import (
 )
 from lineproof.beams.analysis.solve import Solution, solve
 
-from .random_beams import beams, loads_on, repeatable
+from .random_beams import beams, loads_on, repeatable, turned
 
 
 def resultants(beam: Beam, loads: list[Load], up_to: float) -> list[tuple[float, float]]:
@@ -94,17 +92,6 @@ def symmetric(beam: Beam) -> Beam:
     return Beam((*beam.spans, *beam.spans[::-1]), supports)
 
 
-def mirrored(beam: Beam, load: Load) -> Load:
-    """Return a load of the left half as it stands on the right one."""
-    length = beam.spans[load.span - 1].length
-    span = len(beam.spans) + 1 - load.span
-    if isinstance(load, PointLoad):
-        return replace(load, span=span, at=length - load.at)
-    if isinstance(load, PartialLoad):
-        return replace(load, span=span, start=length - load.end, end=length - load.start)
-    return replace(load, span=span)
-
-
 @repeatable
 @given(st.data())
 def test_a_symmetric_beam_under_symmetric_loads(data: st.DataObject) -> None:
@@ -112,7 +99,7 @@ def test_a_symmetric_beam_under_symmetric_loads(data: st.DataObject) -> None:
     half = data.draw(beams())
     beam = symmetric(half)
     loads = data.draw(loads_on(half))
-    solved = solve(beam, [*loads, *(mirrored(beam, load) for load in loads)]).total()
+    solved = solve(beam, [*loads, *(turned(beam, load) for load in loads)]).total()
     reactions = solved.reactions[0]
     size = np.abs(reactions).max()
     assert np.allclose(reactions, reactions[::-1], rtol=0, atol=1e-8 * size)
