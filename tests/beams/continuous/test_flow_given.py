@@ -15,6 +15,7 @@ from lineproof.beams.continuous.resistance_cover import covered
 from lineproof.errors import UserError
 from lineproof.record import Record, recompute
 
+from .beam_with_gaps import built, row
 from .flow import CALLS, record_of, run, start
 
 BOTTOM = {"face": "bottom", "bars": "4-25M", "start": "-0.15 m", "end": "24.55 m"}
@@ -157,3 +158,25 @@ def test_a_proposal_that_does_not_cover_is_refused(monkeypatch: pytest.MonkeyPat
             beam.anchorage()
     with pytest.raises(UserError, match=r"beam\.anchorage\(\) stopped with an error"):
         beam.sheet.close()
+
+
+def test_a_deep_beam_without_stirrups_shows_its_largest_shear_too() -> None:
+    """That the depth asks for stirrups hides no shear: every section fails 11.2.8.1 alike.
+
+    6 m between walls of 300 mm, 400 x 800 mm: D = 24 x 0.4 x 0.8 + (4 + 1) x 3 = 22.68 kN/m and
+    L = 9.6 x 3 = 28.8 kN/m, 1.25D + 1.5L = 71.55 kN/m. d = 800 - 30 - 11.3 - 19.5/2 = 748.95 mm,
+    d_v = 0.9d = 674.06 mm; at d_v from the face V_f = 71.55(3 - 0.15 - 0.67406) = 155.7 kN.
+    beta = 230/(1000 + 674.06) (11.3.6.3), V_c = 0.65 beta sqrt(30) x 400 x 674.06 = 131.9 kN.
+    1.4D alone, the first of the load cases, would be 69.1 kN and hold.
+    """
+    runs = [row("bottom", "4-20M", -0.1, 6.1), row("top", "2-15M", -0.1, 6.1)]
+    _, sheet = built(
+        runs, spans=["6 m"], supports=["wall 300 mm"] * 2, h="800 mm", live_load="9.6 kPa"
+    )
+    for end in ("left", "right"):
+        entries = sheet.entries_of(f"shear-1-{end}")
+        assert entries["V_f"].value == pytest.approx(155.69e3, rel=1e-4)
+        assert entries["V_r"].value == pytest.approx(131.89e3, rel=1e-4)
+    fail = {f"shear-1-{end}/{key}" for end in ("left", "right")
+            for key in ("depth-without-stirrups", "shear-strength")}  # fmt: skip
+    assert fail <= set(sheet.close().failed)

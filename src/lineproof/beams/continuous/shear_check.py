@@ -26,6 +26,8 @@ from lineproof.standards.a23_3 import shear_bars, torsion
 Indices = np.ndarray[Any, np.dtype[np.intp]]
 SMALL = 1e-9
 _NEAR = 1e-6
+_ABOVE_ALL = 1e30
+"""What puts sections that need stirrups and have none before all others."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -108,6 +110,18 @@ class SpanCheck:
     def strength(self) -> Floats:
         """Shear, with torsion where it counts, over what resists it."""
         return self.state.utilisation(self.effective, self.plain)
+
+    @cached_property
+    def ranked(self) -> Floats:
+        """Strength, to find the section that is used most.
+
+        Where stirrups must stand and none count, every section fails alike: there it is the one
+        whose shear is largest beside what the concrete alone resists.
+        """
+        strength, v = self.strength, self.state.v
+        alone = np.maximum(v["V_f"] / np.maximum(v["V_plain"], SMALL), self.state.hopeless)
+        made: Floats = np.where(np.isinf(strength), _ABOVE_ALL * (1 + alone), strength)
+        return made
 
     @cached_property
     def spacing(self) -> Floats:

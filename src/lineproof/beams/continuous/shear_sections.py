@@ -94,7 +94,7 @@ def section_at(check: SpanCheck, forces: Forces, row: int, column: int, key: str
 
 def _at_end(check: SpanCheck, column: int) -> Iterator[tuple[int, int]]:
     """Give the cases to print at an end: that of the shear, others where the bars are used more."""
-    rows = [int(check.strength[:, column].argmax())]
+    rows = [int(check.ranked[:, column].argmax())]
     for name in ("tension", "compression", "bearing"):
         here = check.bars[name][:, column]
         if here.max() > max(_WORTH, max(here[rows]) * _MORE):
@@ -111,7 +111,7 @@ def _along(check: SpanCheck, band: int, known: list[tuple[int, int]]) -> Iterato
     if not here.any():
         return
     places = [at for at in known if check.owner(*at) == band]
-    uses = [(check.strength, 0.0), (check.spacing, 0.0)]
+    uses = [(check.ranked, 0.0), (check.spacing, 0.0)]
     if state.v["counts"].any():
         counts = state.v["counts"]
         uses += [
