@@ -7,7 +7,8 @@ import pytest
 from lineproof.errors import UserError
 from lineproof.standards.a23_3 import bars, cover, crack_control, materials
 from lineproof.standards.codes import CODE_PAIRS, code_pair
-from lineproof.standards.nbc import loads
+from lineproof.standards.nbc import combinations, loads, reduction
+from lineproof.standards.references import NBC_LOADS, NBC_SERVICE
 
 
 def test_bars() -> None:
@@ -119,3 +120,20 @@ def test_code_pairs_are_locked() -> None:
     changed = {name: [c for c, _ in pair.changed] for name, pair in CODE_PAIRS.items()}
     assert changed["NBC 2015 + A23.3-14"] == []
     assert "10.5.2" in changed["NBC 2020 + A23.3:19"]
+
+
+def test_every_article_taken_from_nbc_2020_is_unseen_in_nbc_2025() -> None:
+    """No text of NBC 2025 was read: what the catalogue has from NBC 2020 is to be confirmed.
+
+    4.1.4.1 and Appendix D are on the list of every package, as from memory in other editions.
+    """
+    pair = CODE_PAIRS["NBC 2025 + A23.3:24"]
+    named = {clause for clause, _ in (*pair.changed, *pair.changed_beyond)}
+    used = {
+        each.clause
+        for module in (combinations, loads, reduction)
+        for each in (*module.FORMULAS, *getattr(module, "TABLES", ()))
+        if each.basis in (NBC_LOADS, NBC_SERVICE)
+    }
+    assert {"NBC 4.1.3.2", "NBC 4.1.5.8"} <= used
+    assert used <= named

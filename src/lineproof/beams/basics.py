@@ -66,7 +66,7 @@ def record_materials(
 ) -> None:
     """Record the material factors, the stress block and the modulus of rupture.
 
-    For a ``whole_beam`` the clauses of shear and anchorage count among those that changed.
+    For a ``whole_beam`` those of shear, anchorage and deflection count among the changed clauses.
     """
     with sheet.part(MATERIALS, "Materials"):
         sheet.lookup("phi_c", materials.RESISTANCE_FACTORS, "cast in place")

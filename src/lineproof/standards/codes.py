@@ -14,7 +14,7 @@ class CodePair:
 
     ``changed`` lists (clause, what) of rules known to differ from A23.3-14 whose new text must be
     confirmed by the office in its own copy before they are relied on; ``changed_beyond`` those of
-    shear, anchorage and deflection, which not every calculation uses.
+    shear, anchorage, deflection, partitions and reduced load, which not every calculation uses.
     """
 
     name: str
@@ -31,6 +31,11 @@ _UNSEEN = (
     ("10.1.7", "stress block: assumed unchanged"),
 )
 _SHEAR = ("11.3", "shear: simplified and general method updated since A23.3-14")
+_BEYOND_LOADS = (
+    ("NBC 4.1.3.4", "load cases of deflections: this edition has not been seen"),
+    ("NBC 4.1.4.1", "allowance for partitions: this edition has not been seen"),
+    ("NBC 4.1.5.8", "live load reduction by area: this edition has not been seen"),
+)
 _ANCHORAGE = (
     ("12.2", "development of straight bars: this edition has not been seen"),
     ("12.5", "hooks: a new form, with the bar diameter to the power 1.5"),
@@ -46,7 +51,7 @@ CODE_PAIRS = {
             "NBC 2025",
             "CSA A23.3:24",
             (_DUCTILITY, *_UNSEEN),
-            (_SHEAR, *_ANCHORAGE),
+            (*_BEYOND_LOADS, _SHEAR, *_ANCHORAGE),
         ),
     )
 }
