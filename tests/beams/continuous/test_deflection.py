@@ -204,6 +204,39 @@ def test_rise_with_parts_attached_goes_on_by_creep() -> None:
     assert attached.utilisation == pytest.approx(5 * at / (6600 / 480))
 
 
+def test_sustained_load_that_holds_a_place_down_need_not_be_there() -> None:
+    """Dead load lifts by 2 units, with the sustained load on the place itself by 1, rise 4.
+
+    Without that load dead load creeps: 4 - 2 at once, (3.0 - 2.0)*2 by creep, not (3.0 - 2.0)*1.
+    """
+    section = replace(BASE, f_r=1e6)
+    at = numbers.deflections(section, simple(10e6), carries=FLOOR).stages["all"].delta
+    moments = {
+        "dead": StageMoments(-20e6, 0, 0), "sustained": StageMoments(-10e6, 0, 0),
+        "all": StageMoments(0, 0, 0), "rise": StageMoments(-40e6, 0, 0),
+    }  # fmt: skip
+    attached = numbers.deflections(section, moments, carries=PARTITIONS)  # type: ignore[arg-type]
+
+    assert attached.rise == pytest.approx(2 * at + 2 * at)
+
+
+def test_a_place_above_its_level_under_dead_load_alone_is_limited_upward() -> None:
+    """Storage on the short span brings it down for good; without it dead load creeps upward.
+
+    Three-moment equation, 9, 4.8, 9 m, like moments M at both inner supports: M(2(9 + 4.8) + 4.8)
+    = -(w_1 9**3 + w_2 4.8**3)/4, deflection at midspan times EI: 5w_2 4.8**4/384 + M 4.8**2/8.
+    D = 22: M = -142.5, 152.1 - 410.5 < 0. Storage of 60 beside it: M = -193.7, 566.8 - 557.9 > 0.
+    """
+    loads: list[Load] = [UniformLoad("D", k, 22) for k in (1, 2, 3)]
+    beam = beam_of([9000, 4800, 9000], ["simple"] * 4)
+    live: list[Load] = [UniformLoad("L_st", 2, 60), *(UniformLoad("L_st", k, 8) for k in (1, 3))]
+    service = service_moments(beam, [*loads, *live], 2)
+
+    assert service.arrangement == "live load on span 2"
+    assert service.stages["sustained"].M_m > 0 > service.stages["dead"].M_m
+    assert service.lifting == "live load on spans 1, 3"
+
+
 def test_share_by_use_is_a_stated_assumption() -> None:
     uses = set(USES.rows)
     assert {"storage area", "library stack room", "office"} <= uses

@@ -4,7 +4,7 @@ Dead load lies on all spans. Every loaded span moves midspan of the span looked 
 cantilever) up or down; live load is placed on those that move it down. Snow lies on all spans. A
 stage "rise", with live load on the spans that move the place up, stands beside where that may
 govern: where it moves the place more than the load that lets it sink, or where the place lies above
-its level under sustained load.
+its level under dead or sustained load.
 
 Hogging moments are positive here: ``M_h1`` at the left axis, ``M_h2`` at the right axis. N and mm.
 """
@@ -162,7 +162,7 @@ def service_moments(
     up, rise_case = _chosen(solution.rows, moved, acting, -1.0)
     factors = {stage: _of_stage(stage, down, shares) for stage in STAGES}
     by_row = dict(zip(solution.rows, moved, strict=True))
-    if _may_govern(by_row, down, up, factors["sustained"]):
+    if _may_govern(by_row, down, up, (factors["dead"], factors["sustained"])):
         factors["rise"] = up
     rows = _rows_of(solution, span, free)
     return ServiceMoments(
@@ -195,14 +195,15 @@ def _may_govern(
     moved: Mapping[Row, float],
     down: Mapping[Row, float],
     up: Mapping[Row, float],
-    sustained: Mapping[Row, float],
+    lasting: Iterable[Mapping[Row, float]],
 ) -> bool:
     """Tell whether a rise may exceed the sag: elastic, of gross sections."""
 
     def of(factors: Mapping[Row, float], *, dead: bool) -> float:
         return sum(f * moved[row] for row, f in factors.items() if dead or row[0] != "D")
 
-    return -of(up, dead=False) > of(down, dead=False) or of(sustained, dead=True) < 0
+    above = any(of(factors, dead=True) < 0 for factors in lasting)
+    return above or -of(up, dead=False) > of(down, dead=False)
 
 
 def _live_spans(factors: Mapping[Row, float]) -> tuple[int, ...]:

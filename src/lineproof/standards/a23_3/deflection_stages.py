@@ -200,7 +200,7 @@ RISE = _formula(
     basis=MECHANICS,
 )
 RISE_ATTACHED = _formula(
-    "delta_up = delta_D - delta_R + max((zeta_sa - zeta_s)*delta_sus, 0)",
+    "delta_up = delta_D - delta_R + max((zeta_sa - zeta_s)*min(delta_D, delta_sus), 0)",
     clause="9.8.2.6",
     title="Rise after attachment of the parts carried",
     basis=FROM_MEMORY,
