@@ -180,3 +180,34 @@ def test_a_deep_beam_without_stirrups_shows_its_largest_shear_too() -> None:
     fail = {f"shear-1-{end}/{key}" for end in ("left", "right")
             for key in ("depth-without-stirrups", "shear-strength")}  # fmt: skip
     assert fail <= set(sheet.close().failed)
+
+
+def test_a_strain_out_of_range_hides_no_shear_beside_it() -> None:
+    """Bars far too few at midspan; nearer to the support, in the same zone, the shear is too large.
+
+    9 m between walls, 400 x 500 mm, 2-20M: D = 4.8 + 15 kN/m, L = 4.5 x 3, 1.25D + 1.5L = 45 kN/m.
+    d_v = 0.9(500 - 30 - 11.3 - 9.75) = 404.06 mm. At 1.35 m from the axis of the wall, in 10M at
+    280 mm: V_f = 45(4.5 - 1.35) = 141.75 kN, M_f = 45(4.5 x 1.35 - 1.35**2/2) = 232.4 kN.m,
+    eps_x = (232.4e6/404.06 + 141750)/(2 x 200000 x 600) = 0.00299, the largest in range.
+    beta = 0.40/(1 + 1500 eps_x) = 0.0730, V_c = 0.65 beta sqrt(30) x 400 x 404.06 = 42.0 kN;
+    theta = 29 + 7000 eps_x = 49.9 degrees, V_s = 0.85 x 200 x 400 x 404.06 cot(49.9)/280 = 82.6 kN.
+    """
+    zones = (
+        ("0 m", "0.85 m", "150 mm"),
+        ("0.85 m", "7.85 m", "280 mm"),
+        ("7.85 m", "8.7 m", "150 mm"),
+    )
+    _, sheet = built(
+        [row("bottom", "2-20M", -0.1, 9.1), row("top", "2-15M", -0.1, 9.1)],
+        spans=["9 m"], supports=["wall 300 mm"] * 2, shear_method="general", live_load="4.5 kPa",
+        stirrups=[{"span": 1, "from": a, "to": b, "spacing": s} for a, b, s in zones],
+    )  # fmt: skip
+    failed = {
+        key.split("/")[1]: key.split("/")[0] for key in sheet.close().failed if "along" in key
+    }
+
+    assert set(failed) == {"shear-strength", "strain-range"}
+    entries = sheet.entries_of(failed["shear-strength"])
+    assert entries["x_f"].value == pytest.approx(1350)
+    assert entries["V_f"].value == pytest.approx(141.75e3)
+    assert entries["V_r"].value == pytest.approx((42.0 + 82.6) * 1e3, rel=1e-3)

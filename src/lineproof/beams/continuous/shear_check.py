@@ -17,6 +17,7 @@ from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.shear_arrays import Truths, value
 from lineproof.beams.continuous.shear_numbers import SpanEnd
+from lineproof.beams.continuous.shear_resistance import MOST_STRAIN
 from lineproof.beams.continuous.shear_restrained import tension
 from lineproof.beams.continuous.shear_state import Critical, SpanState
 from lineproof.beams.continuous.stirrups import Band, Change, changes, effective
@@ -112,15 +113,26 @@ class SpanCheck:
         return self.state.utilisation(self.effective, self.plain)
 
     @cached_property
+    def resisted(self) -> Floats:
+        """Shear, with torsion, over what resists it; zero where the strain lets none be given."""
+        state = self.state
+        made: Floats = np.where(
+            state.v["eps_asked"] <= MOST_STRAIN * (1 + 1e-12),
+            state.resisted(self.effective, self.plain), 0.0,
+        )  # fmt: skip
+        return made
+
+    @cached_property
     def ranked(self) -> Floats:
         """Strength, to find the section that is used most.
 
         Where stirrups must stand and none count, every section fails alike: there it is the one
         whose shear is largest beside what the concrete alone resists.
         """
-        strength, v = self.strength, self.state.v
-        alone = np.maximum(v["V_f"] / np.maximum(v["V_plain"], SMALL), self.state.hopeless)
-        made: Floats = np.where(np.isinf(strength), _ABOVE_ALL * (1 + alone), strength)
+        state = self.state
+        alone = np.maximum(state.resisted(self.effective, self.plain), state.hopeless)
+        above = _ABOVE_ALL * (1 + alone)
+        made: Floats = np.where(state.forbidden(self.plain), above, self.strength)
         return made
 
     @cached_property

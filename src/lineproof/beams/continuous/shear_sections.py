@@ -18,7 +18,8 @@ Place = Literal["d_v", "face", "station"]
 _MORE = 1 + 1e-9
 """A further section is printed only where it is used more than those printed already."""
 _WORTH = 0.5
-"""Bars used less than this are not printed for a further case."""
+"""Bars, or a resistance beside a strain that is used more, used less than this are not printed for
+a further case."""
 
 
 @dataclass(frozen=True, eq=False, slots=True)
@@ -93,10 +94,15 @@ def section_at(check: SpanCheck, forces: Forces, row: int, column: int, key: str
 
 
 def _at_end(check: SpanCheck, column: int) -> Iterator[tuple[int, int]]:
-    """Give the cases to print at an end: that of the shear, others where the bars are used more."""
+    """Give the cases to print at an end.
+
+    That of the shear, of its strain or resistance, and others where resistance or bars are used
+    more.
+    """
     rows = [int(check.ranked[:, column].argmax())]
-    for name in ("tension", "compression", "bearing"):
-        here = check.bars[name][:, column]
+    uses = (check.resisted, *(check.bars[n] for n in ("tension", "compression", "bearing")))
+    for use in uses:
+        here = use[:, column]
         if here.max() > max(_WORTH, max(here[rows]) * _MORE):
             rows.append(int(here.argmax()))
     yield from ((row, column) for row in rows)
@@ -111,7 +117,7 @@ def _along(check: SpanCheck, band: int, known: list[tuple[int, int]]) -> Iterato
     if not here.any():
         return
     places = [at for at in known if check.owner(*at) == band]
-    uses = [(check.ranked, 0.0), (check.spacing, 0.0)]
+    uses = [(check.ranked, 0.0), (check.resisted, _WORTH), (check.spacing, 0.0)]
     if state.v["counts"].any():
         counts = state.v["counts"]
         uses += [

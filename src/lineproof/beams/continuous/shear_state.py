@@ -130,7 +130,20 @@ class SpanState:
     def utilisation(self, effective: Floats, plain: Truths) -> Floats:
         """Return demand over resistance of every case and column for 1/s at the columns [1/mm].
 
-        Columns that are ``plain`` have no stirrups that count.
+        Columns that are ``plain`` have no stirrups that count; infinite where they must stand.
+        """
+        made = np.maximum(self.resisted(effective, plain), self.hopeless)
+        return np.where(self.forbidden(plain), np.inf, made)
+
+    def forbidden(self, plain: Truths) -> Truths:
+        """Tell where stirrups must stand, for depth or torsion, and none count."""
+        made: Truths = plain & (self.v["counts"] | (self.h > _DEEP_FOR_PLAIN))
+        return made
+
+    def resisted(self, effective: Floats, plain: Truths) -> Floats:
+        """Return shear, with torsion where it counts, over what resists it, as ``utilisation``.
+
+        Neither the range of the strain nor whether stirrups must stand is looked at.
         """
         v = self.v
         V_s = v["cot"] * effective
@@ -138,8 +151,7 @@ class SpanState:
             by_shear = v["V_f"] / np.minimum(v["V_c"] + V_s, v["V_rmax"])
             by_both = np.where(v["counts"], v["needed"] / effective, by_shear)
             alone = v["V_f"] / v["V_plain"]
-        alone = np.where(v["counts"] | (self.h > _DEEP_FOR_PLAIN), np.inf, alone)
-        made: Floats = np.maximum(np.where(plain, alone, by_both), self.hopeless)
+        made: Floats = np.where(plain, alone, by_both)
         return made
 
 
