@@ -26,6 +26,7 @@ from .deflecting import (
     section_of,
     start_sheet,
 )
+from .flow import CALLS, run, start
 
 EXACT = 1e-9
 UNIFORM: tuple[Load, ...] = tuple(
@@ -246,3 +247,23 @@ def test_curvature_stands_beside_for_information() -> None:
     assert [e["id"] for e in made.entries.values() if e["kind"] == "check"] == [
         "deflection-2/deflection-attached"
     ]
+
+
+@pytest.mark.parametrize(("spans", "row"), [(1, "simply supported"), (2, "one end continuous")])
+def test_an_end_held_by_columns_alone_is_not_continuous_in_the_table(spans: int, row: str) -> None:
+    """Table 9.2: 7 m between columns of 400 mm, l_n = 6.6 m; /16 = 412.5, two spans: /18 = 366.7.
+
+    The columns hold the beam elastically, but no span goes on beyond them.
+    """
+    column = "400 mm x 400 mm x 3 m"
+    beam = start(
+        spans=["7 m"] * spans, supports=["column 400 mm"] * (spans + 1),
+        columns={1: column, spans + 1: column}, use="office",
+        carries="floor, nothing attached that deflection damages",
+    )  # fmt: skip
+    run(beam, CALLS[: CALLS.index("deflections") + 1])
+    entries = beam.sheet.entries_of(f"deflection-{spans}")
+
+    assert entries["k_h"].source.row == f"beam, {row}"
+    assert entries["h_min"].value == pytest.approx(6600 / {1: 16, 2: 18}[spans])
+    assert "columns alone" in entries["by-columns"].source.text

@@ -23,7 +23,7 @@ from lineproof.beams.continuous.deflection_limits import record_limits
 from lineproof.beams.continuous.deflection_local import LocalLoad, Sums, record_local
 from lineproof.beams.continuous.deflection_service import STAGES, FreeEnd, Stage, deflection_key
 from lineproof.beams.steps import Steps, only
-from lineproof.formula import Formula
+from lineproof.formula import COMMON_PRACTICE, Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import deflection as clause
@@ -53,6 +53,12 @@ SYMBOLS: Mapping[Stage, str] = {
 }
 
 
+_BY_COLUMNS = (
+    "An end that columns alone hold, with no span beyond, counts as not continuous in the table of "
+    "least depths, by the stricter reading: how far they hold it depends on their stiffness."
+)
+
+
 def span_name(number: int, free: FreeEnd) -> str:
     """Return what a span is called in titles."""
     return f"cantilever (span {number})" if free else f"span {number}"
@@ -67,7 +73,8 @@ class SpanEntries:
     Each may bind A_sp and d_p, which are counted then. Sections at supports are the
     web, top in tension. ``behind`` is the number of the span behind a cantilever, whose deflections
     must be recorded before; None where the root is fixed. ``l_behind`` is its length. ``top`` binds
-    d and A_s of the top bars that run through midspan, for spans that hog there.
+    d and A_s of the top bars that run through midspan, for spans that hog there. ``by_columns``
+    tells of the left and the right end whether columns alone hold it, with no span beyond.
     """
 
     number: int
@@ -81,11 +88,13 @@ class SpanEntries:
     local: Sequence[LocalLoad] = ()
     local_behind: Sequence[LocalLoad] = ()
     top: Bound | None = None
+    by_columns: tuple[bool, bool] = (False, False)
 
     @property
     def row(self) -> str:
-        """The row of the span-depth table."""
-        return continuity(self.free, self.left, self.right)
+        """The row of the span-depth table: an end held by columns alone is no continuous one."""
+        ends = zip((self.left, self.right), self.by_columns, strict=True)
+        return continuity(self.free, *(None if alone else end for end, alone in ends))
 
     @property
     def name(self) -> str:
@@ -169,6 +178,10 @@ def _is_deep(steps: Steps, span: SpanEntries) -> bool:
 
 def _record_depth(steps: Steps, span: SpanEntries) -> Entry:
     steps.bind(k_h=steps.sheet.lookup("k_h", clause.SPAN_DEPTH, span.row))
+    if any(span.by_columns) and not span.free:
+        steps.sheet.note(
+            "by-columns", _BY_COLUMNS, title="Continuity", clause="9.8.2.1", basis=COMMON_PRACTICE
+        )
     f_y, gamma_c = (float(steps.entry(n).value) for n in ("f_y", "gamma_c"))
     if plain_materials(f_y, gamma_c):
         steps.line(clause.LEAST_DEPTH)

@@ -178,7 +178,14 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
         None if behind is None else model.lengths[behind - 1],
         tuple(_local(load, r_Ls) for load in model.on_span(span)),
         () if behind is None else tuple(_local(load, r_Ls) for load in model.on_span(behind)),
+        by_columns=(_by_columns(model, span), _by_columns(model, span + 1)),
     )
+
+
+def _by_columns(model: Model, support: int) -> bool:
+    """Tell whether columns alone hold the beam at a support, with no span beyond."""
+    exterior = support in (1, model.spans + 1)
+    return exterior and model.inputs.supports[support - 1].kind == "elastic"
 
 
 def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
