@@ -40,6 +40,22 @@ from lineproof.quantity import UNITS, echo, factor, read_quantity, registry
         (Decimal("1.50"), "", 1.5, "1.50"),
         ("45°", "deg", 45.0, "45"),
         ("7.6\u00a0 m", "mm", 7600.0, "7.6"),
+        # Feet and inches, as on drawings: 1 ft is 304.8 mm and 1 in 25.4 mm exactly.
+        ("25'-0\"", "mm", 7620.0, "25"),  # 25 x 304.8
+        ("25'", "mm", 7620.0, "25"),
+        ("25'-6 1/2\"", "mm", 7785.1, "306.5"),  # 25 x 12 + 6.5 = 306.5; x 25.4
+        ("25 ft 6 1/2 in", "mm", 7785.1, "306.5"),
+        ("25’ – 6½”".replace("–", "-"), "mm", 7785.1, "306.5"),
+        ("0'-6\"", "mm", 152.4, "6"),
+        ("-2'-6\"", "mm", -762.0, "-30"),  # the sign is that of the whole length
+        ("3/4 in", "mm", 19.05, "0.75"),
+        ('3/4"', "mm", 19.05, "0.75"),
+        ("6-1/2 in", "mm", 165.1, "6.5"),
+        ("1/64 in", "mm", 0.396875, "0.015625"),
+        ("1'-10.5''", "mm", 571.5, "22.5"),  # 22.5 x 25.4
+        ("1.50 in", "mm", 38.1, "1.50"),  # zeros typed are kept
+        ("1.5 kip/ft", "N/mm", 21.890854405809547, "1.5"),  # 1.5 x 4448.2216152605/304.8
+        ("25 lb/ft2", "MPa", 0.001197006474508396, "25"),  # 25 x 4.4482216152605/304.8^2
     ],
 )
 def test_typed_values(typed: Any, unit: str, value: float, number: str) -> None:
@@ -58,8 +74,28 @@ def test_typed_values(typed: Any, unit: str, value: float, number: str) -> None:
                           "write it in MPa, Pa, kPa, GPa, psi, ksi, psf, ksf")),
         ("2 kN", "kPa", ("f_c: '2 kN' is a force, but a stress or pressure is needed; "
                          "write it in kPa, MPa, Pa, GPa, psi, ksi, psf, ksf")),
-        ("2 ft 2 in", "in", ("f_c: '2 ft 2 in': 'ft 2 in' is not a unit of the list; "
-                             "write one number with one unit, such as '26 in'")),
+        ("2 ft 2 in", "MPa", ("f_c: '2 ft 2 in' is a length, but a stress or pressure is needed; "
+                              "write it in MPa, Pa, kPa, GPa, psi, ksi, psf, ksf")),
+        ("2 m 2 mm", "m", ("f_c: '2 m 2 mm': 'm 2 mm' is not a unit of the list; "
+                           "write one number with one unit, such as '26 in'")),
+        ("2'-13\"", "mm", ("f_c: '2\\'-13\"' is not understood; write '25 ft 6 1/2 in': "
+                          "inches below 12, in halves down to sixty-fourths")),
+        ("1/3 in", "mm", ("f_c: '1/3 in' is not understood; write '25 ft 6 1/2 in': "
+                          "inches below 12, in halves down to sixty-fourths")),
+        ("61/2 in", "mm", ("f_c: '61/2 in' is not understood; write '25 ft 6 1/2 in': "
+                           "inches below 12, in halves down to sixty-fourths")),
+        # 1.200 kN typed for 1200 kN would be a thousandth of the load.
+        ("1,200 kN", "kN", ("f_c: '1,200 kN' is not a number with a unit; write '1200 kN' where "
+                            "the comma parts thousands, else '1.200 kN'")),
+        ("1,234,567 N", "N", "f_c: '1,234,567 N' is not a number with a unit; write '1234567 N'"),
+        ("7 600 mm", "mm", "f_c: '7 600 mm' has spaces between its digits; write '7600 mm'"),
+        ("12 k", "kN", "f_c: '12 k': 'k' is not a unit of the list; write 'kip'"),
+        ("3 k-ft", "kN.m", "f_c: '3 k-ft': 'k-ft' is not a unit of the list; write 'kip.ft'"),
+        ("1.8 kn/m2", "kPa", "f_c: '1.8 kn/m2': 'kn/m2' is not a unit of the list; write 'kPa'"),
+        ("150 pcf", "kg/m3", ("f_c: '150 pcf' is a unit weight, but a density is needed; "
+                              "write '150 lb/ft3'")),
+        ("900 lb/ft", "kN/m", ("f_c: '900 lb/ft' is a mass per length, but a load per length is "
+                               "needed; write '900 plf'")),
         ("32 Mpa", "MPa", "f_c: '32 Mpa': 'Mpa' is not a unit of the list; write 'MPa'"),
         ("15 yards", "mm", ("f_c: '15 yards': 'yards' is not a unit of the list; "
                             "write it in mm, cm, m, in, ft")),
@@ -89,7 +125,8 @@ HOSTILE: list[Any] = [
     "9" * 10_000 + " MPa", "1" + "0" * 100 + " MPa", "1.2.3 MPa", "1 2 MPa", "1_000 MPa",
     "0x20 MPa", "٣٢ MPa", "３２ MPa", "−−32 MPa", "32 MPa MPa", "32 9**9**9", "32 m**9**9**9",
     "32 __import__('os')", "9**9**9", "32 MPa; 5", "32 MPa\x00", "32" + " " * 100_000,
-    "3" * 100_000, "(" * 10_000, "1e5e5 MPa", "--5 MPa", "5e MPa", ".", "+", "e5 MPa", b"32 MPa",
+    "3" * 100_000, "1/2" * 10_000 + " in", "5'" + "-" * 50_000 + "6 in", "+-6 in", "1/0 in",
+    "(" * 10_000, "1e5e5 MPa", "--5 MPa", "5e MPa", ".", "+", "e5 MPa", b"32 MPa",
     {"a": 1}, object(), 3 + 4j, "\ud800 MPa", "32\nMPa\n" * 2000, {1, 2}, range(3),
 ]  # fmt: skip
 
@@ -151,3 +188,13 @@ def test_every_ordinary_float_can_be_given_as_a_number(value: float) -> None:
 def test_echo_is_short() -> None:
     assert len(echo("x" * 10_000)) == 62
     assert echo(10**5000) == "a number of more than 60 digits"
+
+
+@given(
+    st.integers(0, 999), st.integers(0, 11), st.integers(0, 63), st.sampled_from((2, 4, 8, 16, 64))
+)
+def test_feet_and_inches_are_exact(feet: int, inches: int, above: int, below: int) -> None:
+    above %= below
+    typed = f"{feet}'-{inches} {above}/{below}\""
+    exact = (feet * 12 + inches + Fraction(above, below)) * Fraction(254, 10)  # 1 in = 25.4 mm
+    assert Fraction(read_quantity("span", typed, "mm").exact) == exact

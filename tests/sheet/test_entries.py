@@ -153,14 +153,19 @@ def test_us_and_metric_givens_of_one_kind(sheet: Sheet) -> None:
         plain = sheet.given("n", 6)
         strength = sheet.given("f_y", "60 ksi", unit="MPa")  # 60 x 6.894757 = 413.685
         own = sheet.given("s", "12 in")
+        inches = sheet.given("b", "1'-0 1/2\"")  # 12.5 in, 317.5 mm
         product = sheet.line("F_s = n*s*l*f_y", unit="kip")
     assert length.quantity.magnitude == pytest.approx(7.3152, rel=1e-14)
     assert plain.unit == ""
     assert strength.value == pytest.approx(413.68542, rel=1e-7)
-    assert own.unit == "in"
+    assert (own.unit, inches.unit) == ("in", "in")
     # 6 x 12 in x 288 in x 60 ksi = 1 244 160 kip
     assert product.quantity.magnitude == pytest.approx(1_244_160, rel=1e-12)
-    assert recompute(sheet.close()) == []
+    record = sheet.close()
+    assert recompute(record) == []
+    # Printed in the unit in which it was typed, it is not said twice, nor given another digit.
+    printed = record.entries["p/b"]["printed"]
+    assert printed == {"result": "12.5", "unit": "in"}
 
 
 # -- lines -----------------------------------------------------------------------------------

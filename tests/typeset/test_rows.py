@@ -168,7 +168,14 @@ def test_givens_and_lookups_name_their_source() -> None:
         NOTATION,
     )  # fmt: skip
 
+    feet = printed_row(
+        entry("given", symbol="h_f", typed="2'-1 1/2\"", printed={
+            "typed": "25.5", "typed_unit": "in", "result": "647.7", "unit": "mm"}),
+        NOTATION,
+    )  # fmt: skip
+
     assert given.remarks == ("Typed as 5.5\u202fin.", "Source: drawing A-210.")
+    assert feet.remarks == ("Typed as 2'-1 1/2\", which is 25.5\u202fin.",)  # 2 x 12 + 1.5
     assert lookup.remarks == ("Table: slabs, row S1.", "Source: schedule.")
 
 

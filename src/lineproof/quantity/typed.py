@@ -11,6 +11,7 @@ from typing import Protocol, runtime_checkable
 
 from lineproof.errors import UserError
 from lineproof.quantity.digits import MINUS
+from lineproof.quantity.feet import feet_advice, one_unit
 from lineproof.quantity.units import (
     Unit,
     example_unit,
@@ -25,6 +26,11 @@ _TYPED = re.compile(rf"({_NUMBER})(?![0-9.])(.*)\Z", re.DOTALL)
 _LONGEST_ECHO = 60
 _MOST_KEPT = 4096
 """Texts that are kept as read: a record is read from the same ones again and again."""
+_POUNDS = {
+    ("lb", "force"): "lbf", ("lb/ft", "load per length"): "plf", ("pcf", "density"): "lb/ft3",
+    ("lb/ft3", "unit weight"): "pcf",
+}  # fmt: skip
+"""Units of pounds of mass and of force that are written alike in practice."""
 _PINT_NAMES = {"in_l": "inch", "h_t": "hour", "min_t": "minute", "d_t": "day"}
 
 
@@ -52,8 +58,8 @@ class Typed:
     """A quantity as typed and as kept.
 
     ``text`` is what the user wrote, ``number`` (as a printed number: ``0.5`` for ``.5``) and
-    ``unit`` its pieces, ``exact`` the decimal in the internal unit, ``value`` the float the
-    calculation uses [internal unit].
+    ``unit`` its pieces (``306.5`` and ``in`` for ``25'-6 1/2"``), ``exact`` the decimal in the
+    internal unit, ``value`` the float the calculation uses [internal unit].
     """
 
     text: str
@@ -100,7 +106,7 @@ def _read(name: str, given: QuantityInput, unit: str) -> Typed:
         return _read_pint(name, given, wanted)
     # A place told in a package has a true minus, and is typed back with it.
     text = " ".join(given.replace(MINUS, "-").split()) if isinstance(given, str) else _plain(given)
-    match = _TYPED.match(text)
+    match = _TYPED.match(one_unit(text))
     if match is None or match[2].startswith(","):
         raise UserError(f"{name}: {echo(given)} is not a number with a unit; {_hint(text, wanted)}")
     number, unit_text = match[1], match[2].strip()
@@ -133,9 +139,15 @@ def _sample(wanted: Unit) -> str:
 
 def _hint(text: str, wanted: Unit) -> str:
     if re.match(r"[+-]?\d+,\d", text):
-        point = text.replace(",", ".", 1)
-        return f"write a decimal point: {point[:_LONGEST_ECHO]!r}"
-    return f"write for example {_sample(wanted)}"
+        point = text.replace(",", ".", 1)[:_LONGEST_ECHO]
+        if re.match(r"[+-]?\d{1,3}(,\d{3})+(?!\d)", text):  # 7,600 may be 7600 or 7.600
+            whole = text.replace(",", "")[:_LONGEST_ECHO]
+            if text.count(",") > 1:
+                return f"write {whole!r}"
+            return f"write {whole!r} where the comma parts thousands, else {point!r}"
+        return f"write a decimal point: {point!r}"
+    feet = feet_advice(text) if wanted.kind == "length" else ""
+    return f"write {feet}" if feet else f"write for example {_sample(wanted)}"
 
 
 def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: Unit) -> Unit:
@@ -148,16 +160,23 @@ def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: U
         share = f"{Decimal(number) / 100:f}"
         raise UserError(f"{name}: {echo(given)} is in percent; write {share!r}")
     # Where no unit is asked, one of any kind may have been meant.
+    if re.match(r"[+-]?\d{1,3}( \d{3})+(?![\d.])", str(given)):
+        whole = re.sub(r"(?<=\d) (?=\d)", "", str(given))[:_LONGEST_ECHO]
+        raise UserError(f"{name}: {echo(given)} has spaces between its digits; write {whole!r}")
     try:
         unit = unit_named(unit_text, None if wanted.kind == "number" else wanted)
     except UserError as error:
-        raise UserError(f"{name}: {echo(given)}: {error.faults[0]}") from None
+        feet = feet_advice(str(given)) if wanted.kind == "length" else ""
+        said = f" is not understood; write {feet}" if feet else f": {error.faults[0]}"
+        raise UserError(f"{name}: {echo(given)}{said}") from None
     if unit.kind != wanted.kind:
         if wanted.kind == "number":
             raise UserError(f"{name}: {echo(given)} has a unit; write the bare number {number!r}")
+        pounds = _POUNDS.get((unit.spelling, wanted.kind))
+        advice = repr(f"{number} {pounds}") if pounds else f"it in {', '.join(usual_units(wanted))}"
         raise UserError(
             f"{name}: {echo(given)} is {_a(unit.kind)}, but {_a(wanted.kind)} is needed; "
-            f"write it in {', '.join(usual_units(wanted))}"
+            f"write {advice}"
         )
     return unit
 

@@ -132,10 +132,16 @@ NOT_METRIC = frozenset(
 
 _SAME_UNIT = {
     "degrees": "deg", "degree": "deg", "°": "deg", "kN/m2": "kPa", "N/mm2": "MPa", "kNm": "kN.m",
-    "kip.ft.": "kip.ft", "kips": "kip",
+    "kip.ft.": "kip.ft", "kips": "kip", "kip/ft": "klf", "kips/ft": "klf", "lbf/ft": "plf",
+    "lb/ft2": "psf", "lbf/ft2": "psf", "kip/ft2": "ksf", "kips/ft2": "ksf", "lb/in2": "psi",
+    "lbf/in2": "psi", "kip/in2": "ksi", "kips/in2": "ksi", "lbf/ft3": "pcf",
+    "metre": "m", "metres": "m", "meter": "m", "meters": "m",
     "inches": "in", "inch": "in", "feet": "ft", "hours": "h", "hour": "h", "hr": "h",
     "days": "d", "-": "",
 }  # fmt: skip
+
+_SHORT = {"k": "kip", "k.ft": "kip.ft", "ft.k": "kip.ft", "k/ft": "klf", "k/ft2": "ksf", "#": "lbf"}
+"""Short forms that are not taken, since k is a factor of SI as well, with what they stand for."""
 
 _EXAMPLE = {"length": "mm", "stress or pressure": "MPa", "moment": "kN.m", "force": "kN"}
 _EXAMPLES = "one such as 'mm', 'kN', 'kN.m' or 'MPa'"
@@ -185,6 +191,9 @@ def unit_named(text: str, wanted: Unit | None = None) -> Unit:
 
 def _advice(spelling: str, wanted: Unit | None) -> str:
     near = [n for n in _nearest(spelling) if wanted is None or UNITS[n].kind == wanted.kind]
+    meant = _SHORT.get(spelling.lower().replace(" ", ".").replace("-", "."))
+    if meant and (wanted is None or UNITS[meant].kind == wanted.kind):
+        return repr(meant)
     if any(letter.isdigit() for letter in spelling[1:-1]) and " " in spelling:
         return "one number with one unit, such as '26 in'"
     if near:
@@ -194,8 +203,9 @@ def _advice(spelling: str, wanted: Unit | None) -> str:
 
 def _nearest(spelling: str) -> list[str]:
     folded = {name.lower(): name for name in UNITS if name}
-    if spelling.lower() in folded:  # right but for capitals
-        return [folded[spelling.lower()]]
+    same = {name.lower(): unit for name, unit in _SAME_UNIT.items() if unit} | folded
+    if spelling.lower() in same:  # right but for capitals
+        return [same[spelling.lower()]]
     words = ["lbf" if word == "lb" else word for word in re.split("[ .-]+", spelling[:20].lower())]
     for product in (".".join(words), ".".join(reversed(words))):  # ft lb, kip-in
         if product in folded:

@@ -349,7 +349,7 @@ def _longer(arguments: Sequence[Argument], chosen: Chosen) -> list[Argument]:
 
 def _given(entry: Entry, wanted: int) -> dict[str, Any]:
     typed = entry.source.typed
-    if typed.unit not in NOT_METRIC:
+    if typed.unit not in NOT_METRIC or typed.unit == entry.unit:
         return {"result": typed.number, "unit": typed.unit}
     digits = START_DIGITS
     exact = exact_decimal(entry)

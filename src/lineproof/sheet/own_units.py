@@ -5,6 +5,7 @@ from __future__ import annotations
 from lineproof.errors import UserError
 from lineproof.formula import Notation
 from lineproof.quantity import UNITS, unit_named
+from lineproof.quantity.feet import one_unit
 from lineproof.quantity.units import plain_spelling, units_of_kind
 
 
@@ -28,7 +29,7 @@ def keep_to(notation: Notation, name: str, unit: str) -> None:
 def typed_unit(symbol: str, typed: object) -> str:
     """Take the unit from the text itself, for a symbol that no notation knows."""
     if isinstance(typed, str):
-        tail = plain_spelling(typed.strip().lstrip("+-0123456789.eE"))
+        tail = plain_spelling(one_unit(typed.strip()).lstrip("+-0123456789.eE"))
         if tail in UNITS:
             return tail
     if isinstance(typed, str | int | float):

@@ -12,6 +12,7 @@ from typing import Any
 
 from lineproof.formula import FROM_MEMORY
 from lineproof.formula.notation import Notation, Symbol
+from lineproof.quantity.feet import one_unit
 from lineproof.quantity.units import UNITS
 from lineproof.sentences import begun
 from lineproof.typeset.chains import Chain, criterion_chains, line_chain
@@ -194,7 +195,9 @@ def _given(entry: Entry, notation: Notation) -> dict[str, Any]:
     remarks = []
     if printed.get("typed"):
         typed = value_text(printed["typed"], printed["typed_unit"])
-        remarks.append(f"Typed as {typed}.")
+        text = str(entry.get("typed", ""))
+        feet = one_unit(text) != text
+        remarks.append(f"Typed as {text}, which is {typed}." if feet else f"Typed as {typed}.")
     if entry.get("source"):
         remarks.append(f"Source: {entry['source']}.")
     return {"result": _equation(entry, notation), "remarks": remarks}
