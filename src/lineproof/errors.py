@@ -2,7 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Callable, Iterable
+from functools import wraps
+from typing import Any, ParamSpec, TypeVar
+
+_Given = ParamSpec("_Given")
+_Made = TypeVar("_Made")
 
 SHOWN_PREFIX = "Wrong input: "
 """What a fault begins with under a notebook cell; a stored output is told by it."""
@@ -80,3 +85,59 @@ class FileFaults(FaultList):
         if more > 0:
             raise UserError([*self.faults[:MOST_FAULTS], f"{self.name}: and {more} faults more"])
         super().raise_if_any()
+
+
+def inputs_named(call: Callable[_Given, _Made]) -> Callable[_Given, _Made]:
+    """Make a call tell every input that it does not know or lacks, by :class:`UserError`.
+
+    Python's own error names one kind of fault only, shows a traceback in a notebook, and says
+    nothing of what to type.
+
+    >>> @inputs_named
+    ... def beam(*, spans: str, h: str = "600 mm") -> None: ...
+    >>> beam(span="8 m")
+    Traceback (most recent call last):
+    lineproof.errors.UserError: beam: 'span' is no input; did you mean 'spans'?
+    beam: 'spans' is missing; write spans=...
+    """
+
+    @wraps(call)
+    def told(*given: _Given.args, **named: _Given.kwargs) -> _Made:
+        try:
+            return call(*given, **named)
+        except TypeError:
+            faults = _faults_of_call(call, given, named)
+            if not faults:
+                raise  # one of the calculation itself
+            raise UserError(faults) from None
+
+    return told
+
+
+def _faults_of_call(
+    call: Callable[..., Any], given: tuple[Any, ...], named: dict[str, Any]
+) -> list[str]:
+    """Say which arguments a call does not know and which it lacks, and what to type."""
+    import difflib  # noqa: PLC0415 - only where something is wrong
+    import inspect  # noqa: PLC0415
+
+    known = inspect.signature(call).parameters
+    alone = [n for n, p in known.items() if p.kind is p.POSITIONAL_OR_KEYWORD]
+    sample = next((n for n in known if n not in (*alone, *named)), alone[-1])
+    faults = [
+        f"{call.__qualname__}: {value!r:.60} stands alone; write it with the name of its input, "
+        f"such as {sample}=..."
+        for value in given[len(alone) :]
+    ]
+    for name in named:
+        if name not in known:
+            near = difflib.get_close_matches(name, [n for n in known if n not in named], n=1)
+            advice = f"did you mean {near[0]!r}?" if near else "leave it out"
+            faults.append(f"{call.__qualname__}: {name!r} is no input; {advice}")
+    for name, parameter in known.items():
+        if name in named and name in alone[: len(given)]:
+            faults.append(f"{call.__qualname__}: {name!r} is given twice; write it once")
+        lacking = parameter.default is parameter.empty and name not in alone[: len(given)]
+        if lacking and name not in named:
+            faults.append(f"{call.__qualname__}: {name!r} is missing; write {name}=...")
+    return faults

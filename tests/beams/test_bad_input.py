@@ -25,7 +25,7 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     "zero": ({"h": "0 mm"}, "h: '0 mm' is zero; write a positive value such as '600 mm'"),
     "not a number": (
         {"spacing": float("nan")},
-        "spacing: 'nan' is not a number with a unit; write for example '25 m'",
+        "spacing: 'nan' is not a number with a unit; write for example '3.1 m'",
     ),
     "decimal comma": (
         {"span": "7,6 m"},

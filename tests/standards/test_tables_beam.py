@@ -14,6 +14,8 @@ from lineproof.standards.a23_3 import (
     interface,
     shear_factors,
 )
+from lineproof.standards.a23_3.bars import GRADES
+from lineproof.standards.a23_3.cover import EXPOSURES
 from lineproof.standards.codes import code_pair
 from lineproof.standards.nbc import loads, reduction
 from lineproof.standards.nbc.combinations import CASES, SERVICE_CASES, factored, specified
@@ -147,3 +149,25 @@ def test_slabs_and_light_assembly() -> None:
     assert reduction.reduction("assembly area", 4.8e-3, "NBC 2020") is reduction.FACTOR_HEAVY
     with pytest.raises(UserError, match=r"'ofice' is not a use .*did you mean 'office'"):
         reduction.reduction("ofice", 2.4e-3, "NBC 2020")
+
+
+@pytest.mark.parametrize(
+    ("table", "typed", "advice"),
+    [
+        # Closest letter by letter is S-2, another class.
+        (EXPOSURES, "f-2", "did you mean 'F-2'? There are N, F-1,"),
+        (GRADES, "400", "did you mean '400R' or '400W'? There are 400R, 400W, 500R, 500W"),
+        (loads.USES, "Assembly area", "did you mean 'assembly area'?"),
+        (
+            loads.USES, "garage",
+            ("did you mean 'garage, vehicles to 4000 kg' or 'garage, vehicles to 9000 kg' or "
+            "'garage, vehicles above 9000 kg'?"),
+        ),
+        # Names with commas in a list of commas are quoted.
+        (loads.USES, "barn", "'reading room', 'garage, vehicles to 4000 kg', "),
+    ],
+)  # fmt: skip
+def test_a_row_that_is_not_there(table: LookupTable, typed: str, advice: str) -> None:
+    with pytest.raises(UserError) as caught:
+        table.row(typed, "x")
+    assert advice in str(caught.value)

@@ -27,6 +27,7 @@ from lineproof.beams.second_path import SECOND_PATH, record_second_path
 from lineproof.beams.section import SECTION, record_section
 from lineproof.beams.steps import Steps
 from lineproof.beams.top_steel import TOP_STEEL, record_free_ends, record_top_steel
+from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.sheet import Sheet, Trial
 from lineproof.standards.a23_3 import bars as bar_clause
@@ -245,6 +246,7 @@ def layers_on(sheet: Sheet) -> BarLayers:
     return tuple(BarLayer(round(entries[n].value), entries[d].source.row) for n, d in rows)
 
 
+@inputs_named
 def floor_beam(
     sheet: Sheet,
     *,

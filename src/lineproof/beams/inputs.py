@@ -2,13 +2,22 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Any, Literal
 
 from lineproof.beams.bars import BarLayers, read_bars, read_one_layer
 from lineproof.errors import FaultList, UserError
-from lineproof.quantity import QuantityInput, Typed, echo, internal_factor, read_quantity
+from lineproof.quantity import (
+    QuantityInput,
+    Typed,
+    echo,
+    internal_factor,
+    read_quantity,
+    unit_named,
+)
+from lineproof.quantity.units import usual_units
 from lineproof.sheet import LookupTable
 from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_COVER, FIRE_SLAB
@@ -57,6 +66,7 @@ RANGES: Mapping[str, Range] = {
     "fire_rating": Range("h", 0.5, 4, 2),
     "M_f": Range("kN.m", 0, 1e6, 250, zero=True),
 }
+_BARE = r"[0-9]{1,9}(\.[0-9]{0,9})?"
 _OUTSIDE = {"f_c": " (A23.3, 8.6.1.1)"}
 
 
@@ -72,9 +82,12 @@ def read_in_range(name: str, given: QuantityInput, allowed: Range, why: str = ""
     """
     if given is None:
         raise UserError(f"{name}: is missing; write for example {_sample(allowed)}")
-    typed = read_quantity(name, given, allowed.unit)
-    value = typed.value
     low, high = (x * internal_factor(allowed.unit) for x in (allowed.low, allowed.high))
+    unit = _unit_meant(given, allowed.unit, low, high)
+    if unit:
+        raise UserError(f"{name}: {echo(given)} has no unit; write {unit}")
+    typed = read_quantity(name, given, allowed.unit, f"{allowed.usual:g}")
+    value = typed.value
     if value < 0 or (value == 0 and not allowed.zero):
         what = "negative" if value < 0 else "zero"
         raise UserError(
@@ -87,6 +100,20 @@ def read_in_range(name: str, given: QuantityInput, allowed: Range, why: str = ""
             "write a value inside it"
         )
     return typed
+
+
+def _unit_meant(given: object, usual: str, low: float, high: float) -> str:
+    """Return a number without a unit in the units that it may have been meant in; else nothing.
+
+    Where it would be in range in the usual unit that is advised with the error as for any other:
+    7600 is a span in mm, not in m.
+    """
+    text = str(given).strip() if isinstance(given, str | int | float) else ""
+    if isinstance(given, bool) or not usual or not re.fullmatch(_BARE, text):
+        return ""
+    units = usual_units(unit_named(usual))
+    meant = [unit for unit in units if low <= float(text) * internal_factor(unit) <= high]
+    return "" if not meant or units[0] in meant else " or ".join(f"'{text} {u}'" for u in meant)
 
 
 def _sample(allowed: Range) -> str:
@@ -256,6 +283,19 @@ def _use_inside(name: str, given: object) -> str:
             "inside the building"
         )
     return row_of(name, given, USES)
+
+
+def bare_number(given: object) -> str:
+    """Say how a whole number is typed that stands in quotes or has a point; else nothing.
+
+    >>> bare_number("2"), bare_number(2.0), bare_number("two")
+    ('2 without quotes', '2 without a point', '')
+    """
+    if isinstance(given, str) and re.fullmatch(r"[0-9]{1,9}", given.strip()):
+        return f"{int(given)} without quotes"
+    if isinstance(given, float) and given.is_integer() and abs(given) < 1e9:  # noqa: PLR2004
+        return f"{int(given)} without a point"
+    return ""
 
 
 def yes_or_no(name: str, given: object) -> bool:

@@ -29,6 +29,7 @@ from lineproof.beams.inputs import (
 from lineproof.beams.record_figures import moment_level, record_section_figure, record_strain_figure
 from lineproof.beams.second_path import SECOND_PATH, record_second_path
 from lineproof.beams.section import SECTION, record_gross
+from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
@@ -104,6 +105,7 @@ class SectionStudy:
         record_capacity(sheet, shape, (A_s, M_r), bars_text(self.layers), levels, tabulate=True)
 
 
+@inputs_named
 def section_study(
     sheet: Sheet,
     *,

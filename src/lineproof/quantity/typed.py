@@ -78,10 +78,11 @@ def echo(given: object) -> str:
     return repr(cut)
 
 
-def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
+def read_quantity(name: str, given: QuantityInput, unit: str, usual: str = "25") -> Typed:
     """Read a quantity of the kind of ``unit``.
 
-    ``name`` is the input named in the error; a bare number is taken only where ``unit`` is "".
+    ``name`` is the input named in the error, ``usual`` the number of the example that it gives; a
+    bare number is taken only where ``unit`` is "".
     Raises :class:`UserError` that says what to type.
 
     >>> read_quantity("span", "7.6 m", "mm").value, read_quantity("start", "−0.1 m", "mm").value
@@ -90,25 +91,29 @@ def read_quantity(name: str, given: QuantityInput, unit: str) -> Typed:
     Traceback (most recent call last):
     lineproof.errors.UserError: f_c: '32' has no unit; write '32 MPa'
     """
-    return _read_text(name, given, unit) if given.__class__ is str else _read(name, given, unit)
+    read = _read_text if given.__class__ is str else _read
+    return read(name, given, unit, usual)  # type: ignore[arg-type]
 
 
 @lru_cache(maxsize=_MOST_KEPT)
-def _read_text(name: str, given: str, unit: str) -> Typed:
-    return _read(name, given, unit)
+def _read_text(name: str, given: str, unit: str, usual: str) -> Typed:
+    return _read(name, given, unit, usual)
 
 
-def _read(name: str, given: QuantityInput, unit: str) -> Typed:
+def _read(name: str, given: QuantityInput, unit: str, usual: str) -> Typed:
     wanted = unit_named(unit)
+    sample = repr(f"{usual} {example_unit(wanted)}".strip())
     if isinstance(given, bool) or given is None:
-        raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
+        raise UserError(f"{name}: {echo(given)} is not a quantity; write {sample}")
     if not isinstance(given, str | int | float | Decimal):
-        return _read_pint(name, given, wanted)
+        return _read_pint(name, given, wanted, sample)
     # A place told in a package has a true minus, and is typed back with it.
     text = " ".join(given.replace(MINUS, "-").split()) if isinstance(given, str) else _plain(given)
     match = _TYPED.match(one_unit(text))
     if match is None or match[2].startswith(","):
-        raise UserError(f"{name}: {echo(given)} is not a number with a unit; {_hint(text, wanted)}")
+        raise UserError(
+            f"{name}: {echo(given)} is not a number with a unit; {_hint(text, wanted, sample)}"
+        )
     number, unit_text = match[1], match[2].strip()
     return _checked(name, text, number, _typed_unit(name, given, number, unit_text, wanted), wanted)
 
@@ -133,11 +138,7 @@ def _as_printed(number: str) -> str:
     return sign + plain + (f"e{int(power)}" if power and int(power) else "")
 
 
-def _sample(wanted: Unit) -> str:
-    return repr(f"25 {example_unit(wanted)}".strip())
-
-
-def _hint(text: str, wanted: Unit) -> str:
+def _hint(text: str, wanted: Unit, sample: str) -> str:
     if re.match(r"[+-]?\d+,\d", text):
         point = text.replace(",", ".", 1)[:_LONGEST_ECHO]
         if re.match(r"[+-]?\d{1,3}(,\d{3})+(?!\d)", text):  # 7,600 may be 7600 or 7.600
@@ -147,7 +148,7 @@ def _hint(text: str, wanted: Unit) -> str:
             return f"write {whole!r} where the comma parts thousands, else {point!r}"
         return f"write a decimal point: {point!r}"
     feet = feet_advice(text) if wanted.kind == "length" else ""
-    return f"write {feet}" if feet else f"write for example {_sample(wanted)}"
+    return f"write {feet}" if feet else f"write for example {sample}"
 
 
 def _typed_unit(name: str, given: object, number: str, unit_text: str, wanted: Unit) -> Unit:
@@ -185,9 +186,9 @@ def _a(kind: str) -> str:
     return f"an {kind}" if kind.startswith("a") else f"a {kind}"
 
 
-def _read_pint(name: str, given: object, wanted: Unit) -> Typed:
+def _read_pint(name: str, given: object, wanted: Unit, sample: str) -> Typed:
     if not isinstance(given, PintQuantity):
-        raise UserError(f"{name}: {echo(given)} is not a quantity; write {_sample(wanted)}")
+        raise UserError(f"{name}: {echo(given)} is not a quantity; write {sample}")
     # Full names stand in every registry, ours and pint's own.
     pint_name = wanted.expression
     for ours, full in _PINT_NAMES.items():
@@ -200,7 +201,7 @@ def _read_pint(name: str, given: object, wanted: Unit) -> Typed:
         ) from None
     text = _plain(float(f"{number:.12g}"))
     if not math.isfinite(number):
-        raise UserError(f"{name}: {echo(given)} is not a finite number; write {_sample(wanted)}")
+        raise UserError(f"{name}: {echo(given)} is not a finite number; write {sample}")
     return _checked(name, f"{text} {wanted.spelling}".strip(), text, wanted, wanted)
 
 

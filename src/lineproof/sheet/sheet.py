@@ -6,7 +6,7 @@ from collections.abc import Callable, Iterable, Mapping
 from pathlib import Path
 from typing import Any, ClassVar
 
-from lineproof.errors import UserError
+from lineproof.errors import UserError, inputs_named
 from lineproof.formula import Criterion, Formula, Notation, System
 from lineproof.formula import formula as read_formula
 from lineproof.formula.compiled import NOT_COMPUTED
@@ -84,6 +84,7 @@ class Sheet(Finding):
         self.not_covered: list[Mapping[str, str]] = []
 
     @classmethod
+    @inputs_named
     def open(cls, calc_id: str, *, project: str | Path, title: str = "") -> Sheet:
         """Start the calculation ``calc_id`` of the project whose facts stand in a TOML file."""
         return cls(calc_id, title, project=read_project(Path(project)))

@@ -9,6 +9,8 @@ from dataclasses import dataclass, field
 from lineproof.errors import UserError
 from lineproof.quantity import echo
 
+_MOST_NEAR = 3
+
 
 @dataclass(frozen=True)
 class LookupTable:
@@ -35,13 +37,30 @@ class LookupTable:
         """Return a row; raises :class:`UserError` that names ``what`` and the rows."""
         found = self.rows.get(key) if isinstance(key, str) else None
         if found is None:
-            near = difflib.get_close_matches(str(key)[:20], self.rows, n=1)
-            hint = f"; did you mean {near[0]!r}? There are" if near else "; write one of"
+            near = " or ".join(map(repr, self._near(str(key)[:60])))
+            hint = f"; did you mean {near}? There are" if near else "; write one of"
             raise UserError(
                 f"{what}: {echo(key)} is not {article(self.word)} {self.word}{hint} "
-                f"{', '.join(self.rows)}"
+                f"{self._listed()}"
             )
         return found
+
+    def _near(self, key: str) -> list[str]:
+        """Return the rows that may be meant: begun alike whatever the capitals, else the closest.
+
+        Of a few like beginnings all are told: 400R and 400W, garages of each weight.
+        """
+        begun = [row for row in self.rows if key and row.lower().startswith(key.strip().lower())]
+        if 0 < len(begun) <= _MOST_NEAR:
+            return begun
+        folded = {row.lower(): row for row in self.rows}
+        close = difflib.get_close_matches(key[:20].lower(), folded, n=1)
+        return [folded[row] for row in close]
+
+    def _listed(self) -> str:
+        """Return all rows in words, quoted where a name holds a comma itself."""
+        rows = self.rows
+        return ", ".join(map(repr, rows) if any("," in row for row in rows) else rows)
 
     def number(self, key: str, column: str) -> float:
         """Return one number of the table, in the column's unit."""

@@ -7,6 +7,7 @@ from typing import Any
 
 import pytest
 
+from lineproof.beams import continuous_beam
 from lineproof.beams.continuous.typed_torques import read_torques
 from lineproof.errors import UserError
 from lineproof.sheet import Sheet
@@ -18,6 +19,10 @@ TOP = {"face": "top", "bars": "5-25M", "start": "-0.15 m", "end": "24.55 m"}
 EDGE: dict[str, Any] = {
     "shape": "L", "tributary_width": "1.7 m", "torques": {"D": "14 kN.m", "L": "9 kN.m"},
 }  # fmt: skip
+REQUIRED = (
+    "spans", "supports", "h", "b_w", "h_f", "spacing", "f_c", "grade", "superimposed", "use",
+    "exposure", "fire_rating", "cover",
+)  # fmt: skip
 P24: dict[str, Any] = {"codes": {"pair": "NBC 2025 + A23.3:24"}}
 
 
@@ -380,4 +385,86 @@ def test_a_share_without_a_unit_is_refused_without_a_blank_for_it() -> None:
     matches(
         refused_at_start(sustained=-0.1),
         "sustained: '-0.1' is negative; write a positive value such as '0.25'",
+    )
+
+
+def test_a_number_without_a_unit_is_answered_with_the_unit_that_it_can_stand_in() -> None:
+    """7600 m is no span, 4500 MPa no concrete, 24 mm no depth."""
+    said = refused_at_start(spans=["7600", "9.2 m", "7.6 m"], h="24", f_c="4500")
+    assert sorted(said) == [
+        "f_c: '4500' has no unit; write '4500 psi'",
+        "h: '24' has no unit; write '24 cm' or '24 in'",
+        "spans, span 1: '7600' has no unit; write '7600 mm'",
+    ]
+
+
+def test_whole_numbers_in_quotes_or_with_a_point_are_told_as_that() -> None:
+    """Span '2' is not answered with 'write 1 to 3': that is what seems to stand there."""
+    said = refused_at_start(
+        columns={"2": ["450 mm x 450 mm x 3.6 m"]}, stirrup_legs="2",
+        loads=[{"type": "D", "span": "2", "line": "3 kN/m"},
+               {"type": "D", "span": 2.0, "line": "3 kN/m"}],
+        redistribution={"2": 10, 3: "10 %"},
+    )  # fmt: skip
+    assert sorted(said) == [
+        "columns, support '2': write 2 without quotes",
+        "loads, load 1: span '2'; write 2 without quotes",
+        "loads, load 2: span '2.0'; write 2 without a point",
+        ("redistribution: {'2': 10}; write number of the support and per cent, both without "
+        "quotes: {2: 15}"),
+        ("redistribution: {3: '10 %'}; write number of the support and per cent, both without "
+        "quotes: {2: 15}"),
+        "stirrup_legs: '2'; write 2 without quotes",
+    ]  # fmt: skip
+
+
+def test_a_share_is_no_redistribution_in_per_cent() -> None:
+    matches(
+        refused_at_start(redistribution={2: 0.1}),
+        "redistribution at support 2: 0.1 % is less than one per cent; write 10 for 10 %",
+    )
+
+
+def test_supports_with_more_than_a_width_are_shown_how_to_write() -> None:
+    girder = "girder 400 mm"
+    matches(
+        refused_at_start(supports=[girder, "column 450 mm fixed", "column 450 x 450 mm", girder]),
+        "supports, support 2: 'column 450 mm fixed' is not understood; write 'column 450 mm', ",
+        "supports, support 3: 'column 450 x 450 mm' is not understood; write 'column 450 mm', ",
+    )
+
+
+def test_a_spacing_that_is_not_read_has_one_fault() -> None:
+    matches(
+        refused_at("flexure", stirrups=[{"span": 1, "spacing": "150"}, {"span": "2"}]),
+        "stirrups, zone 1: spacing: '150' has no unit; write '150 mm'",
+        "stirrups, zone 2: span '2' does not exist; write 2 without quotes",
+    )
+
+
+def test_an_input_by_another_name_is_told_with_the_one_that_is_missing() -> None:
+    with pytest.raises(UserError) as caught:
+        continuous_beam(  # type: ignore[call-arg]
+            Sheet("B7", "Beam", project=PROJECT), "7.6 m", spacin="3 m",
+            **{name: None for name in REQUIRED if name != "spacing"},  # type: ignore[arg-type]
+        )  # fmt: skip
+    assert caught.value.faults == (
+        (
+            "continuous_beam: '7.6 m' stands alone; write it with the name of its input, such as "
+            "spacing=..."
+        ),
+        "continuous_beam: 'spacin' is no input; did you mean 'spacing'?",
+        "continuous_beam: 'spacing' is missing; write spacing=...",
+    )
+
+
+def test_a_sheet_opened_without_its_project_says_so() -> None:
+    with pytest.raises(UserError) as caught:
+        Sheet.open("B7", "project.toml")  # type: ignore[call-arg]
+    assert caught.value.faults == (
+        (
+            "Sheet.open: 'project.toml' stands alone; write it with the name of its input, such as "
+            "project=..."
+        ),
+        "Sheet.open: 'project' is missing; write project=...",
     )

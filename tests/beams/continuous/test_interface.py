@@ -129,7 +129,8 @@ def test_lengths_as_lines() -> None:
     [
         ("10M", "is not understood; write '10M at 250 mm'"),
         ("12M at 250 mm", "12M"),
-        ("10M at 2 m", "a spacing outside 0 to 500 mm"),
+        ("10M at 2 m", "a spacing outside 50 to 500 mm"),
+        ("10M at 2 mm", "a spacing outside 50 to 500 mm"),  # bars that lie in each other
         ("10M at 250", "has no unit"),
         ("5 x 10M at 250 mm", "is not understood"),
     ],

@@ -46,6 +46,7 @@ from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
 from lineproof.beams.floor_beam import prepare
+from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.record import Part
 from lineproof.sheet import Sheet, Trial
@@ -213,6 +214,7 @@ class ContinuousBeam:
             record_summary(*self._designed())
 
 
+@inputs_named
 def continuous_beam(
     sheet: Sheet,
     *,

@@ -39,6 +39,7 @@ from lineproof.beams.inputs import (
     InputReader,
     Range,
     Shape,
+    bare_number,
     check_density,
     no_openings,
     one_of,
@@ -224,7 +225,8 @@ def _read_legs(name: str, given: object) -> int:
         or not isinstance(given, int)
         or not LEAST_LEGS <= given <= MOST_LEGS
     ):
-        raise UserError(f"{name}: {echo(given)}; write {LEAST_LEGS} to {MOST_LEGS}")
+        told = bare_number(given) or f"{LEAST_LEGS} to {MOST_LEGS}"
+        raise UserError(f"{name}: {echo(given)}; write {told}")
     return given
 
 
@@ -250,10 +252,15 @@ def _read_redistribution(name: str, given: object) -> dict[int, float]:
     made: dict[int, float] = {}
     for support, percent in given.items():
         number = isinstance(percent, int | float) and not isinstance(percent, bool)
-        if not isinstance(support, int) or not number:
+        if type(support) is not int or not number:
             faults.add(
-                f"{name}: {echo(support)}: {echo(percent)}; write number of the support and per "
-                "cent: {2: 15}"
+                f"{name}: {{{support!r:.30}: {percent!r:.30}}}; write number of the support and "
+                "per cent, both without quotes: {2: 15}"
+            )
+        elif 0 < abs(percent) < 1:  # a share is meant: nobody redistributes half a per cent
+            faults.add(
+                f"{name} at support {support}: {percent} % is less than one per cent; write "
+                f"{percent * 100:g} for {percent * 100:g} %"
             )
         else:
             made[support] = float(percent)

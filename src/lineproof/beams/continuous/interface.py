@@ -18,6 +18,8 @@ from lineproof.standards.references import MECHANICS
 
 NOT_COVERED = {"check": "Shear between flange and web", "clause": "11.5"}
 """What is said where the bars of the slab are not given."""
+LEAST_SPACING, MOST_SPACING = 50.0, 500.0
+"""Spacing of bars of the slab [mm]: closer ones leave no way for concrete, wider ones act apart."""
 _SLAB_BARS = re.compile(
     r"\s*(?:(?P<layers>[12])\s*x\s*)?(?P<size>\d\dM)\s+at\s+(?P<spacing>.+?)\s*\Z", re.IGNORECASE
 )
@@ -59,9 +61,10 @@ def read_slab_bars(name: str, text: object) -> SlabBars:
     size = match["size"].upper()
     bars.BARS.row(size, name)
     spacing = read_quantity(name, match["spacing"], "mm").value
-    if not 0 < spacing <= 500:  # noqa: PLR2004 - wider bars do not act together
+    if not LEAST_SPACING <= spacing <= MOST_SPACING:
         raise UserError(
-            f"{name}: {echo(text)} has a spacing outside 0 to 500 mm; write '10M at 250 mm'"
+            f"{name}: {echo(text)} has a spacing outside {LEAST_SPACING:g} to {MOST_SPACING:g} mm; "
+            "write '10M at 250 mm'"
         )
     return SlabBars(int(match["layers"] or 1), size, spacing)
 

@@ -18,6 +18,7 @@ from lineproof.beams.continuous.stirrups import (
     first_distance,
     least_space,
 )
+from lineproof.beams.inputs import bare_number
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import echo, read_quantity
 from lineproof.standards.a23_3.bars import BARS
@@ -155,7 +156,8 @@ def _read_zone(
             faults.add(f"{name}: {echo(key)} is unknown; write {', '.join(_KEYS)}")
     span = row.get("span")
     if not isinstance(span, int) or span not in clear:
-        faults.add(f"{name}: span {echo(span)} does not exist; write one of {_listed(clear)}")
+        told = bare_number(span) or f"one of {_listed(clear)}"
+        faults.add(f"{name}: span {echo(span)} does not exist; write {told}")
         raise UserError(faults.faults)
     length = clear[span]
     start, end, s = _read_lengths(name, row, length, faults)
@@ -188,6 +190,8 @@ def _read_lengths(
 def _check_spacing(
     name: str, row: Mapping[str, Any], s: float, basis: ShearBasis, faults: FaultList
 ) -> None:
+    if not math.isfinite(s) and row.get("spacing") is not None:
+        return  # not read: its fault is told
     if row.get("spacing") is None:
         faults.add(f"{name}: no spacing; write for example 'spacing': '200 mm'")
     elif s > _WIDEST:

@@ -10,7 +10,7 @@ from typing import Any, Literal
 from lineproof.beams.analysis.arrangements import LOAD_TYPES
 from lineproof.beams.analysis.model import FarEnd, SupportKind
 from lineproof.beams.continuous.layout import Carrier
-from lineproof.beams.inputs import Range, read_in_range
+from lineproof.beams.inputs import Range, bare_number, read_in_range
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed, echo
 
@@ -28,7 +28,9 @@ AREA_LOAD = Range("kPa", 0, 500, 2.4, zero=True)
 POINT_LOAD = Range("kN", 0, 20000, 50, zero=True)
 GRAVITY_TYPES = tuple(kind for kind in LOAD_TYPES if kind not in ("W", "E"))
 _SUPPORT = re.compile(r"\s*(column|girder|wall)\s+([^,]+?)\s*(,\s*fixed)?\s*\Z")
-_COLUMN = re.compile(r"\s*(.+?)\s+x\s+(.+?)\s+x\s+(.+?)\s*(,\s*pinned)?\s*\Z")
+_MORE = re.compile(r"[^ ] [x×] [^ ]|[a-z\"'] (?:fixed|pinned|free|simple)")
+"""More than a width: two sizes, or how it holds without the comma."""
+_COLUMN = re.compile(r"\s*(.+?)\s+[x×]\s+(.+?)\s+[x×]\s+(.+?)\s*(,\s*pinned)?\s*\Z")
 _SUPPORT_SAMPLE = "'column 450 mm', 'girder 400 mm', 'wall 300 mm, fixed' or 'free'"
 _COLUMN_SAMPLE = "'450 mm x 450 mm x 3.6 m' (along the beam, across it, height)"
 
@@ -136,7 +138,7 @@ def _read_support(name: str, given: object, columns: tuple[TypedColumn, ...]) ->
             raise UserError(f"{name}: a free end has no columns; leave them out")
         return TypedSupport("none", None, "free")
     match = _SUPPORT.match(str(given))
-    if match is None:
+    if match is None or _MORE.search(match[2]):
         raise UserError(f"{name}: {echo(given)} is not understood; write {_SUPPORT_SAMPLE}")
     carrier = next(c for c in CARRIERS if c == match[1])
     if columns and (match[3] or carrier != "column"):
@@ -168,9 +170,11 @@ def _read_columns(
         return {}
     made: dict[int, tuple[TypedColumn, ...]] = {}
     for number, texts in given.items():
-        name = f"columns, support {number}"
-        if not isinstance(number, int) or not 1 <= number <= supports:
-            faults.add(f"{name}: the beam has supports 1 to {supports}")
+        name = f"columns, support {number if type(number) is int else echo(number)}"
+        if type(number) is not int or not 1 <= number <= supports:
+            told = bare_number(number)
+            told = f"write {told}" if told else f"the beam has supports 1 to {supports}"
+            faults.add(f"{name}: {told}")
             continue
         if not isinstance(texts, str | list | tuple):
             faults.add(f"{name}: {echo(texts)} is not understood; write {_COLUMN_SAMPLE}")
@@ -274,7 +278,8 @@ def _span_numbers(name: str, given: object, count: int) -> tuple[int, ...]:
         return tuple(range(1, count + 1))
     if isinstance(given, int) and not isinstance(given, bool) and 1 <= given <= count:
         return (given,)
-    raise UserError(f"{name}: span {echo(given)}; write 1 to {count}, or 'all'")
+    told = bare_number(given) or f"1 to {count}, or 'all'"
+    raise UserError(f"{name}: span {echo(given)}; write {told}")
 
 
 def _inside(
