@@ -290,9 +290,42 @@ def test_end_supports_too_narrow_for_hooks() -> None:
     assert "write a wider support" in faults[0]
 
 
-def test_bars_that_do_not_fit_are_told_by_the_title_of_the_check() -> None:
+def test_bars_that_do_not_fit_do_not_hide_what_stops_those_that_do() -> None:
+    """More bars than fit are always tried; that they do not fit is no reason by itself."""
     faults = refused_at("flexure", h="400 mm", b_w="250 mm")
-    assert faults[0].startswith("top_bars: no bars pass every check at support 2: stopped by: Bars")
+    start_of_it = "top_bars: no bars pass every check at support 2: stopped by: Moment resistance"
+    assert faults[0].startswith(start_of_it)
+    assert faults[0].endswith("write a deeper or wider beam, or stronger concrete")
+
+
+def test_where_not_two_bars_fit_width_alone_makes_room() -> None:
+    """190 - 2 x (60 + 11.3) = 47.4 mm between the legs: no room for 2 x 16 + 30 mm."""
+    faults = refused_at("flexure", b_w="190 mm", cover="60 mm", h="800 mm")
+    assert "stopped by: Bars fit into the layer" in faults[0]
+    assert faults[0].endswith("come nearest; write a wider beam")
+
+
+def test_the_advice_where_cracks_stop_the_bars_is_a_cure() -> None:
+    """z = 0.6 f_y (d_c A)^(1/3) holds neither depth nor concrete; d_c is 60 + 11.3 + 8 mm here.
+
+    A deeper beam and stronger concrete stay refused as they were; the two that are told do not.
+    """
+    cracking: dict[str, Any] = {
+        "spans": ["8.4 m"], "supports": ["column 500 mm, fixed"] * 2, "h": "700 mm",
+        "b_w": "500 mm", "h_f": "200 mm", "spacing": "5 m", "exposure": "C-1", "cover": "60 mm",
+        "f_c": "35 MPa", "grade": "500R", "use": "garage, vehicles to 4000 kg",
+    }  # fmt: skip
+    told = "stopped by: Crack control; "
+    for more in ({}, {"h": "1000 mm"}, {"f_c": "50 MPa"}):
+        faults = refused_at("flexure", project=P24, **cracking | more)
+        assert told in faults[0]
+        assert faults[0].endswith("write a wider beam, or grade = '400R' or '400W'")
+    for cure in ({"b_w": "800 mm"}, {"grade": "400R"}):
+        beam = start(project=P24, **cracking | cure)
+        for call in ("loads", "spans", "analysis", "flexure"):
+            getattr(beam, call)()
+        lhs, rhs = beam.sheet.entry("sag-1/crack-control").value
+        assert lhs <= rhs
 
 
 def test_a_frame_analysis_that_is_not_there() -> None:

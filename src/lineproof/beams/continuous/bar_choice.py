@@ -7,11 +7,10 @@ sections with a second layer as can be; least mass; fewest bars. Sizes from 15M 
 
 from __future__ import annotations
 
-from collections import Counter
-from collections.abc import Callable, Iterable, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
-from lineproof.beams.bars import MOST_LAYERS, BarLayer, BarLayers, TopBars, in_line
+from lineproof.beams.bars import MOST_LAYERS, BarLayer, BarLayers, TopBars, bars_text, in_line
 from lineproof.beams.choice import MOST_BARS, SIZES, bars_for
 from lineproof.beams.continuous.numbers import Numbers, value
 from lineproof.beams.continuous.section_checks import (
@@ -23,7 +22,7 @@ from lineproof.beams.continuous.section_checks import (
 )
 from lineproof.beams.inputs import OVERHANGS
 from lineproof.errors import FaultList
-from lineproof.standards.a23_3 import minimum
+from lineproof.standards.a23_3 import crack_control, minimum
 from lineproof.standards.a23_3.bars import (
     BARS,
     FITS,
@@ -35,7 +34,9 @@ from lineproof.standards.catalogue import criteria
 
 ANCHORAGE = "anchorage in the support"
 _ROOM = frozenset((FITS.key, FITS_SECOND.key, FITS_OVERHANG.key))
-_BEAM_OR_CONCRETE = "a deeper or wider beam, or stronger concrete"
+_LOWER_GRADES = 400.0
+"""Yield stress [MPa] of the grades below 500R and 500W."""
+_CRACKS = frozenset({crack_control.CRACKS.key})
 FOR_SHEAR = "the bars that shear and torsion ask for (11.3.9, 11.3.10.6)"
 
 
@@ -72,14 +73,31 @@ class Chosen:
         return key, self.checks[key]
 
 
-Trial = Callable[[Section, str, int], tuple[Chosen | None, str]]
-"""Find the best bars of one size in so many layers, or say which check stopped them."""
+@dataclass(frozen=True, slots=True)
+class Stopped:
+    """What stopped bars: the utilisation of every check that fails, and the bars or their size.
+
+    Of several, ``nearest`` is first that of bars that fit: more bars than fit are always there to
+    be tried, and that they do not fit says nothing of what stops those that do.
+    """
+
+    fails: Mapping[str, float]
+    bars: Bars | str
+
+    @property
+    def nearest(self) -> tuple[bool, float]:
+        """What is least for the bars that come nearest."""
+        return bool(_ROOM & self.fails.keys()), max(self.fails.values())
+
+
+Trial = Callable[[Section, str, int], tuple[Chosen | None, Stopped | None]]
+"""Find the best bars of one size in so many layers, or say what stopped those nearest to it."""
 
 
 def choose(sections: Sequence[Section], trial: Trial, what: str) -> tuple[Chosen, ...]:
     """Return bars for every section by the stated order; raises :class:`UserError` if none do."""
     found: dict[str, list[Chosen | None]] = {size: [None] * len(sections) for size in SIZES}
-    stopped: dict[str, Counter[str]] = {section.name: Counter() for section in sections}
+    stopped: dict[str, list[Stopped]] = {section.name: [] for section in sections}
     # A second layer is worse than any bars in one: none is tried where one layer does everywhere.
     for layers in range(1, MOST_LAYERS + 1):
         for size, row in found.items():
@@ -87,7 +105,7 @@ def choose(sections: Sequence[Section], trial: Trial, what: str) -> tuple[Chosen
                 if row[place] is None:
                     row[place], why = trial(section, size, layers)
                     if why:
-                        stopped[section.name][why] += 1
+                        stopped[section.name].append(why)
         alike = [[c for c in row if c is not None] for row in found.values()]
         whole = [row for row in alike if len(row) == len(sections)]
         if whole:
@@ -119,7 +137,7 @@ def _number(bars: Bars) -> int:
 def _each_its_own(
     sections: Sequence[Section],
     found: dict[str, list[Chosen | None]],
-    stopped: dict[str, Counter[str]],
+    stopped: dict[str, list[Stopped]],
     what: str,
 ) -> Iterable[Chosen]:
     faults = FaultList()
@@ -129,15 +147,32 @@ def _each_its_own(
         if able:
             yield min(able, key=lambda c: order([c], [section]))
             continue
-        keys = [key for key, _ in stopped[section.name].most_common(3)]
-        support = "a wider support, " if ANCHORAGE in keys else ""
-        # Where there is no room for the bars, stronger concrete makes none.
-        beam = "a deeper or wider beam" if _ROOM.issuperset(keys) else _BEAM_OR_CONCRETE
         faults.add(
-            f"{what}: no bars pass every check at {section.name}: stopped by: "
-            f"{', '.join(map(_said, keys))}; write {support}{beam}"
+            f"{what}: no bars pass every check at {section.name}: "
+            + _stopped_and_cure(section, stopped[section.name])
         )
     faults.raise_if_any()
+
+
+def _stopped_and_cure(section: Section, stopped: Sequence[Stopped]) -> str:
+    """Say what stops the bars that come nearest, and what would let some pass.
+
+    The stress of the crack control is a part of the yield stress: neither depth nor concrete moves
+    it. Where no bars fit at all, width alone makes room.
+    """
+    anchored = [each for each in stopped if ANCHORAGE in each.fails]
+    near = min(anchored or stopped, key=lambda each: each.nearest)
+    keys = sorted(near.fails, key=lambda key: -near.fails[key])
+    said = ", ".join(_said(key) for key in keys)
+    support = "a wider support, " if anchored else ""
+    beam = "a deeper or wider beam, or stronger concrete"
+    if _CRACKS.issuperset(keys):
+        lower = section.numbers[0]["f_y"] > _LOWER_GRADES
+        beam = "a wider beam" + (", or grade = '400R' or '400W'" if lower else "")
+    elif _ROOM & near.fails.keys():
+        beam = "a wider beam"
+    bars = bars_text(near.bars) if isinstance(near.bars, tuple) else near.bars
+    return f"stopped by: {said}; {bars} come nearest; write {support}{beam}"
 
 
 def _said(key: str) -> str:
@@ -148,17 +183,22 @@ def _said(key: str) -> str:
 def bottom_trial(rules: Rules, stirrup: str) -> Trial:
     """Return the search for the least bottom bars of one size."""
 
-    def trial(section: Section, size: str, number: int) -> tuple[Chosen | None, str]:
-        why: Counter[str] = Counter()
+    def trial(section: Section, size: str, number: int) -> tuple[Chosen | None, Stopped | None]:
+        why: list[Stopped] = []
+        few = []
         for layers in _layouts(size, number):
             if _area(layers) < section.least:
-                why[FOR_SHEAR] += 1
+                few.append(layers)
                 continue
             checks = bottom_checks(dict(section.numbers[0]), rules, layers, stirrup)
             if not fails(checks):
-                return Chosen(section.name, layers, checks), ""
-            why[worst_of(checks)] += 1
-        return None, why.most_common(1)[0][0]
+                return Chosen(section.name, layers, checks), None
+            why.append(Stopped(_failing(checks), layers))
+        for layers in few:
+            checks = bottom_checks(dict(section.numbers[0]), rules, layers, stirrup)
+            lack = {FOR_SHEAR: section.least / _area(layers)}
+            why.append(Stopped(_failing(checks) | lack, layers))
+        return None, min(why, key=lambda each: each.nearest)
 
     return trial
 
@@ -185,22 +225,29 @@ def top_trial(rules: Rules, stirrup: str, part: Part) -> Trial:
     """Return the search for the least top bars of one size; each face must pass."""
     sides = OVERHANGS[rules.shape]
 
-    def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, str]:
-        why: Counter[str] = Counter()
+    def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, Stopped | None]:
+        why: list[Stopped] = []
+        few: list[tuple[TopBars, float]] = []
         for bars in _top_layouts(section, size, sides, layers):
             within = sum(layer.area for layer in bars.layers)
             if within < section.least or bars.area < section.least_all:
-                why[FOR_SHEAR] += 1
+                few.append((bars, max(section.least / within, section.least_all / bars.area)))
                 continue
             counted = part(section.name, bars)
             faces = [top_checks(dict(at), rules, bars, stirrup, counted) for at in section.numbers]
             checks = max(faces, key=lambda face: max(face.values()))
             if not fails(checks):
-                return Chosen(section.name, bars, checks), ""
+                return Chosen(section.name, bars, checks), None
             whole = (top_checks(dict(at), rules, bars, stirrup) for at in section.numbers)
             by_anchorage = counted < 1 and not any(map(fails, whole))
-            why[ANCHORAGE if by_anchorage else worst_of(checks)] += 1
-        return None, ANCHORAGE if why[ANCHORAGE] else why.most_common(1)[0][0]
+            failing = {ANCHORAGE: max(checks.values())} if by_anchorage else _failing(checks)
+            why.append(Stopped(failing, bars))
+        for bars, lack in few:
+            faces = [top_checks(dict(at), rules, bars, stirrup) for at in section.numbers]
+            checks = max(faces, key=lambda face: max(face.values()))
+            why.append(Stopped(_failing(checks) | {FOR_SHEAR: lack}, bars))
+        anchored = [each for each in why if ANCHORAGE in each.fails]
+        return None, min(anchored or why, key=lambda each: each.nearest)
 
     return trial
 
@@ -235,6 +282,5 @@ def _spread(at: Numbers) -> float:
     return value(minimum.SPREAD_AREA, at | {"b_ot": width})
 
 
-def worst_of(checks: Checks) -> str:
-    """Return the key of the check that fails by most."""
-    return max(checks, key=lambda key: checks[key])
+def _failing(checks: Checks) -> Checks:
+    return {key: used for key, used in checks.items() if used > 1}

@@ -12,6 +12,7 @@ from lineproof.beams.continuous.bar_choice import (
     ANCHORAGE,
     Chosen,
     Section,
+    Stopped,
     bottom_trial,
     choose,
     top_trial,
@@ -100,10 +101,10 @@ def choose_bottom(
     numbered = {section.name: span for span, section in sections.items()}
     search = bottom_trial(rules, stirrup)
 
-    def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, str]:
+    def trial(section: Section, size: str, layers: int) -> tuple[Chosen | None, Stopped | None]:
         at_ends = least_anchored(numbered[section.name], size) if least_anchored else 0.0
         if math.isinf(at_ends):
-            return None, ANCHORAGE
+            return None, Stopped({ANCHORAGE: math.inf}, f"bars {size}")
         return search(replace(section, least=max(section.least, at_ends)), size, layers)
 
     found = choose(list(sections.values()), trial, "bottom_bars")
