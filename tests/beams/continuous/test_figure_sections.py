@@ -57,6 +57,15 @@ def test_sections_are_readable(kind: str, legs: int, closed: bool, depth: float)
         assert_readable(figure, SOLID)
 
 
+@pytest.mark.parametrize(("kind", "b_w"), [("T", 1800.0), ("L", 900.0), ("rectangular", 1800.0)])
+def test_shallow_wide_sections_are_readable(kind: str, b_w: float) -> None:
+    """A band of 350 mm by 1800 mm is 14 mm tall on paper, less than the names beside it need."""
+    width = b_w if kind == "rectangular" else b_w + 1400.0
+    beam = replace(outline(shape=kind, depths=(350.0,) * 3, b_w=b_w), widths=(width,) * 3)
+    for _, _, figure in sections_of(beam, marked(beam, SKIN)):
+        assert_readable(figure)
+
+
 @pytest.mark.parametrize("x", [225.0, 1000.0, 3800.0, 7375.0, 7600.0, 7850.0, 12200.0, 24000.0])
 def test_bars_of_a_station(x: float) -> None:
     """As many circles as bars whose run holds the station, each of its diameter."""

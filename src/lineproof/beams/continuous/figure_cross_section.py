@@ -39,7 +39,10 @@ TALLEST = 48.0
 REACH = 8.0
 """From the face of the web to the names of bars, mm on paper."""
 BELOW = 16.0
-LINE = 4.6
+LINE, CLOSEST = 4.6, 3.5
+"""From one name of bars to the next, and where there is little room."""
+UNDER = 4.5
+"""From the soffit to names under it, past the text of the cover."""
 NEXT, FLANGE_OFFSET = 6.5, 4.5
 """From one dimension line to the next, and from the flange of a T to its thickness."""
 
@@ -82,6 +85,10 @@ def section_at(
         first = REACH + max(text_width(name.runs, TEXT_SIZE) for name in right) + 4.0
     first = max(first, shown.right * shown.scale + 6.0)
     drawn = [circle for _, circle in (*circles, *flange, *sides)]
+    lowest = min(
+        _heights(shape, shown, len(left), -1.0)[0], _heights(shape, shown, len(right), 1.0)[0]
+    )
+    below = max(BELOW, 8.0 - lowest * shown.scale)
     shapes: list[Shape] = [
         *outline(shape, shown, goes_on=True),
         *stirrup_shapes(steel),
@@ -103,14 +110,14 @@ def section_at(
     if needed > width:
         margin += (needed - width) / 2
         width = needed
-    at_note = ((width / 2 - margin) / shown.scale, (-BELOW + 3.0) / shown.scale)
+    at_note = ((width / 2 - margin) / shown.scale, (3.0 - below) / shown.scale)
     shapes.append(Text(at_note, words(note), "text", 2.6))
     above = 12.0 if shape.kind != "rectangle" else 5.0
     return Figure(
         round(width, 1),
-        round(shape.h * shown.scale + BELOW + above, 1),
+        round(shape.h * shown.scale + below + above, 1),
         shown.scale,
-        (round(margin, 3), BELOW),
+        (round(margin, 3), round(below, 3)),
         tuple(shapes),
         _alt(name, x, shape, steel),
         name,
@@ -236,9 +243,7 @@ def _near(points: Sequence[Point], face: float) -> Point:
 
 def _callouts(shape: SectionShape, shown: Shown, names: Sequence[Named], way: float) -> list[Shape]:
     unit = 1.0 / shown.scale
-    flanged = shape.kind == "T" or (shape.kind == "L" and way > 0.0)
-    ceiling = shape.h - (shape.h_f + 3.5 * unit if flanged else 1.5 * unit)
-    floor = 6.8 * unit if way < 0.0 else 2.0 * unit
+    floor, ceiling = _heights(shape, shown, len(names), way)
     wanted = [min(max(name.target[1], floor), ceiling) + _rank(shape, name, way) for name in names]
     face = 0.0 if way < 0.0 else shape.b_w
     shapes: list[Shape] = []
@@ -252,6 +257,24 @@ def _callouts(shape: SectionShape, shown: Shown, names: Sequence[Named], way: fl
         shapes.append(Arrow(start, name.target, "text", THIN, 1.3))
         shapes.append(Text(at, name.runs, "text", anchor="end" if way < 0.0 else "start"))
     return shapes
+
+
+def _heights(shape: SectionShape, shown: Shown, count: int, way: float) -> tuple[float, float]:
+    """Return between which heights so many names stand beside the web [mm].
+
+    A web that is too shallow for its names has them under the soffit as well: at the left all of
+    them, past the text of the cover, at the right those that find no room beside it.
+    """
+    unit = 1.0 / shown.scale
+    flanged = shape.kind == "T" or (shape.kind == "L" and way > 0.0)
+    ceiling = shape.h - (shape.h_f + 3.5 * unit if flanged else 1.5 * unit)
+    floor = 6.8 * unit if way < 0.0 else 2.0 * unit
+    gaps = max(count - 1, 0)
+    if ceiling - floor >= gaps * CLOSEST * unit:
+        return floor, ceiling
+    if way < 0.0:
+        ceiling = -UNDER * unit
+    return ceiling - gaps * LINE * unit, ceiling
 
 
 def _rank(shape: SectionShape, name: Named, way: float) -> float:
