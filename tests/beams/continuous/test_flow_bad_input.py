@@ -105,7 +105,7 @@ def test_unstable_supports_are_named() -> None:
     matches(
         refused_at_start(spans=["3 m", "3 m"], supports=["free", "column 450 mm", "free"]),
         "supports: the beam is unstable: it turns about support 2, its only support, which is "
-        "simple; write 'fixed' there or add a support",
+        "simple; write ', fixed' behind it, or add a support",
     )
     matches(
         refused_at_start(supports=["girder 400 mm", "free", "column 450 mm", "girder 400 mm"]),
@@ -501,3 +501,10 @@ def test_a_sheet_opened_without_its_project_says_so() -> None:
         ),
         "Sheet.open: 'project' is missing; write project=...",
     )
+
+
+def test_a_cantilever_that_turns_is_told_how_a_support_is_held() -> None:
+    """The word alone is no support: 'column 400 mm, fixed' is."""
+    said = refused_at_start(spans=["2.4 m"], supports=["column 400 mm", "free"])
+    assert said[0].endswith("write ', fixed' behind it, or add a support")
+    start(spans=["2.4 m"], supports=["column 400 mm, fixed", "free"])

@@ -130,7 +130,7 @@ class Beam:
     >>> Beam((Span(6000, 2e13),), (Support("simple"), Support("free")))
     Traceback (most recent call last):
     lineproof.errors.UserError: supports: the beam is unstable: it turns about support 1, its \
-only support, which is simple; write 'fixed' there or add a support
+only support, which is simple; write ', fixed' behind it, or add a support
     """
 
     spans: tuple[Span, ...]
@@ -225,7 +225,7 @@ def _check_stability(supports: Sequence[Support], faults: FaultList) -> None:
     elif len(held) == 1 and supports[held[0] - 1].kind == "simple":
         faults.add(
             f"supports: the beam is unstable: it turns about support {held[0]}, its only support, "
-            "which is simple; write 'fixed' there or add a support"
+            "which is simple; write ', fixed' behind it, or add a support"
         )
 
 
