@@ -16,7 +16,7 @@ from lineproof.standards.a23_3 import shear_bars
 
 from .by_hand import outline
 from .edge_beam import Edge
-from .flow import record_of
+from .flow import CALLS, record_of, start
 
 
 @pytest.fixture(scope="module")
@@ -108,6 +108,25 @@ def test_deflections_of_the_figure_are_told_from_those_of_the_checks(floor: Reco
     """The figure integrates curvatures, the check has one effective moment of inertia."""
     figure = str(floor.entries["summary/deflected"])
     assert "Values of the checks: at midspan, by one effective moment of inertia." in figure
+
+
+@pytest.mark.parametrize(
+    ("spans", "supports", "where"),
+    [
+        (["2.4 m"], ["wall 300 mm, fixed", "free"], "at the free end of a cantilever"),
+        (["6 m", "2.4 m"], ["wall 300 mm", "wall 300 mm", "free"],
+         "at midspan and at the free end of a cantilever"),
+    ],
+)  # fmt: skip
+def test_a_cantilever_is_checked_at_its_free_end(
+    spans: list[str], supports: list[str], where: str
+) -> None:
+    """Its deflection at midspan is compared with nothing."""
+    beam = start(spans=spans, supports=supports)
+    for call in CALLS:
+        getattr(beam, call)()
+    figure = str(beam.sheet.close().entries["summary/deflected"])
+    assert f"Values of the checks: {where}, by one effective moment of inertia." in figure
 
 
 def test_tables_of_envelopes_say_what_they_leave_out(floor: Record, edge: Record) -> None:

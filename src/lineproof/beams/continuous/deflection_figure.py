@@ -34,9 +34,10 @@ from lineproof.drawing import Figure
 from lineproof.errors import UserError
 from lineproof.record import Entry
 
+MIDSPAN, TIP = "at midspan", "at the free end of a cantilever"
 CHECKED = (
     "Values here: the largest of a span, by the curvature of every section. Values of the checks: "
-    "at midspan, by one effective moment of inertia."
+    "{}, by one effective moment of inertia."
 )
 UNCHECKED = (
     "A span that has the least depth (9.8.2.1) has no check of its deflection: no limit applies to "
@@ -76,7 +77,14 @@ def _notes(model: Model) -> list[str]:
             model.sheet.entries_of(deflection_key(span)) for span in range(1, model.spans + 1)
         )
     ]
-    return [*([CHECKED] if any(checked) else []), *([] if all(checked) else [UNCHECKED])]
+    tips = [free_end(model.forces.beam, span) for span in range(1, model.spans + 1)]
+    places = [
+        place
+        for place, at in ((MIDSPAN, False), (TIP, True))
+        if any(told and bool(tip) is at for told, tip in zip(checked, tips, strict=True))
+    ]
+    said = [CHECKED.format(" and ".join(places))] if places else []
+    return [*said, *([] if all(checked) else [UNCHECKED])]
 
 
 def bent_of(
