@@ -26,6 +26,10 @@ from lineproof.sheet.parts import check_calc_id, check_key
 from lineproof.sheet.project import read_project
 from lineproof.sheet.tables import LookupTable
 
+_NOTHING = (
+    "nothing is recorded on this sheet; run the cell that opens it and starts the calculation"
+)
+
 
 class PartView:
     """One closed part of a sheet, as it is shown under a notebook cell."""
@@ -274,10 +278,11 @@ class Sheet(Finding):
     def close(self) -> Record:
         """Fix the printed strings and return the record.
 
-        Refuses with every reason at once: a part not run, a part that stopped with an error, or
-        something that rests on a replaced entry.
+        Refuses with every reason at once: nothing recorded, a part not run, a part that stopped
+        with an error, or something that rests on a replaced entry.
         """
-        faults = [
+        faults = [] if self._parts or self.expected else [_NOTHING]
+        faults += [
             f"part {key!r} ({title}) stopped with an error; run it again"
             for key, title in self._stopped.items()
         ]

@@ -508,3 +508,18 @@ def test_a_cantilever_that_turns_is_told_how_a_support_is_held() -> None:
     said = refused_at_start(spans=["2.4 m"], supports=["column 400 mm", "free"])
     assert said[0].endswith("write ', fixed' behind it, or add a support")
     start(spans=["2.4 m"], supports=["column 400 mm, fixed", "free"])
+
+
+def test_a_sheet_without_any_part_is_no_record() -> None:
+    """Its beam was refused; cells below may have run all the same, with the beam before it."""
+    sheet = Sheet("B7", "Gallery floor beam", project=PROJECT)
+    with pytest.raises(UserError):
+        start(sheet=sheet, f_c="32")
+    with pytest.raises(UserError) as caught:
+        sheet.close()
+    assert caught.value.faults == (
+        (
+            "B7: nothing is recorded on this sheet; run the cell that opens it and starts the "
+            "calculation"
+        ),
+    )
