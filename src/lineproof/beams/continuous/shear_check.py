@@ -226,8 +226,9 @@ class SpanCheck:
         """Return the area that bottom and top bars need, and that which counts [mm2].
 
         By case and column. Zero is needed nearer to a support than a critical section, and where
-        torsion does not count, but for the tension side at the critical sections themselves: there
-        no longer bars stand for the shear (11.3.9.1).
+        torsion does not count, but for the critical sections themselves: there no longer bars
+        stand for the shear on the tension side (11.3.9.1), and those on the other side carry the
+        tension that shear leaves there (11.3.9.3).
         """
         v, force = self.state.v, self.state.basis.phi_s * self.state.basis.f_y
         there = np.where(v["bottom"], v["A_sp"], v["A_s"])
@@ -249,11 +250,11 @@ class SpanCheck:
     def _by_face(self, asked: Truths) -> tuple[Floats, Floats]:
         """Return the force in the bottom and in the top bars, by case, in [N].
 
-        That of the tension side where it is ``asked``, that of the other side for torsion.
+        Of either side where it is ``asked``.
         """
         v = self.state.v
         tension = np.where(asked, self._capped(self.bars["F_lt"]), 0.0)
-        compression = np.where(v["counts"], self.bars["F_lc"], 0.0)
+        compression = np.where(asked, self.bars["F_lc"], 0.0)
         bottom = np.where(v["bottom"], tension, compression)
         return bottom, np.where(v["bottom"], compression, tension)
 
