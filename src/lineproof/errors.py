@@ -123,7 +123,7 @@ def _faults_of_call(
 
     known = inspect.signature(call).parameters
     alone = [n for n, p in known.items() if p.kind is p.POSITIONAL_OR_KEYWORD]
-    sample = next((n for n in known if n not in (*alone, *named)), alone[-1])
+    sample = next((n for n in known if n not in (*alone, *named)), "input")
     faults = [
         f"{call.__qualname__}: {value!r:.60} stands alone; write it with the name of its input, "
         f"such as {sample}=..."
