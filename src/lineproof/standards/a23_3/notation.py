@@ -360,7 +360,7 @@ _ROWS = (
     ("c_top", "c", "top", "", "cover of the hooked bars at the top or bottom face", "mm"),
     ("A_bs", "A", "bs", "", "area of one stirrup leg", "mm2"),
     ("A_sall", "A", "s,all", "", "area of bars at a section, developed or not", "mm2"),
-    ("A_sall1", "A", "s,all,1", "", "area of the first groups at a section, developed or not", "mm2"),
+    ("A_sall1", "A", "s,all,1", "", "area of bars in the first groups, developed or not", "mm2"),
     ("A_sd1", "A", "sd1", "", "area of bars counted as far as developed, first group", "mm2"),
     ("A_sd2", "A", "sd2", "", "area of bars counted as far as developed, second group", "mm2"),
 )  # fmt: skip
