@@ -2,19 +2,29 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from itertools import pairwise
 
 import numpy as np
 
-from lineproof.beams.continuous.anchorage import development_length
-from lineproof.beams.continuous.cutoff import along, distance, far_face, half_of, local, sag_at
+from lineproof.beams.continuous.anchorage import development_length, value
+from lineproof.beams.continuous.cutoff import (
+    along,
+    depths,
+    distance,
+    far_face,
+    full_moment,
+    half_of,
+    local,
+    sag_at,
+)
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.beams.continuous.resistance import alike, lap_pairs, lapped, level_pairs
 from lineproof.beams.continuous.resistance_demand import NOTHING
+from lineproof.standards.a23_3 import cutoff as clause
 
 Runs = tuple[BarRun, ...]
 _INSIDE = 1.0
@@ -234,3 +244,24 @@ def inflection(designed: Designed, span: int, near: End, count: int = 101) -> In
     most = max(found, key=lambda point: point.V)
     _, V_there = designed.forces.pairs(span, local(designed, span, near, most.t))
     return Inflection(most.t, most.row, abs(float(V_there[most.row])))
+
+
+def held_at_zero(
+    designed: Designed, span: int, near: End, inside: Sequence[BarRun], t_end: float
+) -> bool:
+    """Tell whether bottom bars are developed by 12.11.3 at the point of inflection near a support.
+
+    ``inside`` run into the support and end ``t_end`` [mm] from its axis.
+    """
+    point = inflection(designed, span, near)
+    if point is None:
+        return True
+    d_b = max(run.diameter for run in inside)
+    l_ext = value(clause.PAST_INWARD, x_t=point.t, x_e=t_end)
+    d, _ = depths(designed, "bottom", span, near)
+    longest = value(
+        clause.LIMIT, M_r=full_moment(designed, "bottom", span, inside), V_f=point.V,
+        l_a=value(clause.PAST_INFLECTION, l_ext=l_ext, d=d, d_b=d_b),
+    )  # fmt: skip
+    lengths = (development_length(designed, replace(run, start=0.0, end=1.0)) for run in inside)
+    return max(lengths) <= longest

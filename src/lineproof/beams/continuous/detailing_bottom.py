@@ -43,6 +43,7 @@ from lineproof.beams.continuous.cutoff import (
     worst_between,
     zones_at,
 )
+from lineproof.beams.continuous.cutoff_ends import held_at_zero
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.detailing_through import going_past, run_through
 from lineproof.beams.continuous.forces import ENDS, End
@@ -179,9 +180,13 @@ def _anchored(designed: Designed, span: int, near: End, groups: Sequence[BarRun]
     numbers = range(first, len(groups))
     if not designed.exterior(support):
         return next(
-            (Anchored(n) for n in numbers if _share(designed, support, groups, n)),
+            (
+                Anchored(n) for n in numbers
+                if _share(designed, support, groups, n)
+                and _held_at_zero(designed, span, near, groups[: n + 1])
+            ),
             Anchored(len(groups) - 1),
-        )
+        )  # fmt: skip
     sizes = {run.size for run in groups}
     hooked = all(hook_part(designed, support, size) > 0 for size in sizes)
     hooks: tuple[Hook, ...] = ("", "90") if hooked else ("",)
@@ -220,8 +225,12 @@ def _held(
     if A_sd * yield_force(designed) < face_tension(designed, span, near):
         return False
     if designed.outline.supports[support - 1].kind != "simple":
-        return True
+        return _held_at_zero(designed, span, near, inside)
     return max(lengths) <= limit_at_support(designed, span, near, inside)
+
+
+def _held_at_zero(designed: Designed, span: int, near: End, inside: Sequence[BarRun]) -> bool:
+    return held_at_zero(designed, span, near, inside, support_end(designed, span, near))
 
 
 def face_tension(designed: Designed, span: int, near: End) -> float:
