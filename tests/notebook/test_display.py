@@ -11,7 +11,15 @@ import pytest
 
 import lineproof
 from lineproof.drawing import Figure, Line, to_json
-from lineproof.notebook.display import ANCHOR, METADATA, bundle, cell_hash, register
+from lineproof.errors import UserError
+from lineproof.notebook.display import (
+    ANCHOR,
+    METADATA,
+    bundle,
+    cell_hash,
+    refuse_replaced,
+    register,
+)
 from lineproof.sheet import PartView, Sheet
 
 # Tags and attributes that JupyterLab leaves in untrusted HTML (its packages/apputils sanitizer).
@@ -211,6 +219,17 @@ from lineproof.sheet import Sheet
 print(Sheet.shown.__module__)
 """
     assert run_python(code) == "lineproof.notebook.display"
+
+
+def test_a_beam_of_an_earlier_sheet_shows_nothing_below_new_inputs() -> None:
+    """The start cell opened a new sheet and was refused: ``beam`` is still the one before it."""
+    before, now = Sheet("B7", "Beam"), Sheet("B7", "Beam")
+    with pytest.raises(UserError, match="B7: this rests on a sheet from before the inputs were"):
+        refuse_replaced(before, {"sheet": now, "_3": before})
+    refuse_replaced(now, {"sheet": now, "_3": before})
+    refuse_replaced(before, {"sheet": now, "first": before})
+    refuse_replaced(before, {"sheet": Sheet("B8", "Another beam")})
+    refuse_replaced(before, {})
 
 
 def test_unknown_names_of_lineproof_are_refused() -> None:

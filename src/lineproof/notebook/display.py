@@ -14,6 +14,7 @@ from html import escape
 from typing import Any
 
 from lineproof.drawing import from_json, svg
+from lineproof.errors import UserError
 from lineproof.record import digest_of
 from lineproof.sheet import PartView, Sheet
 from lineproof.typeset import plain, printable, tex
@@ -43,8 +44,26 @@ def show(view: PartView) -> None:
     """Display a part under the running cell."""
     from IPython.display import display  # noqa: PLC0415 - only inside IPython
 
-    data, metadata = bundle(view, ran=_cells_run(_shell()))
+    shell = _shell()
+    refuse_replaced(view.sheet, getattr(shell, "user_ns", {}))
+    data, metadata = bundle(view, ran=_cells_run(shell))
     display(data, metadata=metadata, raw=True)  # type: ignore[no-untyped-call]
+
+
+def refuse_replaced(sheet: Sheet, names: Mapping[str, Any]) -> None:
+    """Refuse a part of a sheet in whose place another has been opened for the same calc.
+
+    Where the cell that starts the beam was refused, later cells still find the beam before it:
+    its results would stand below the new inputs. ``names`` are those of the notebook.
+    """
+    open_now = [v for n, v in names.items() if isinstance(v, Sheet) and not n.startswith("_")]
+    if any(each is sheet for each in open_now):
+        return
+    if any(each.calc["id"] == sheet.calc["id"] for each in open_now):
+        raise UserError(
+            f"{sheet.calc['id']}: this rests on a sheet from before the inputs were changed; run "
+            "the cell that starts the calculation again, and mend what it refuses"
+        )
 
 
 def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:
