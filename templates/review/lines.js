@@ -34,9 +34,14 @@ function lineOf(calc, entry) {
     calc, id: entry.id, kind: entry.kind, digest: entry.digest, label: entry.label || "",
     title: begun(entry.title || entry.symbol), needed: TO_CHECK.has(entry.kind),
     about: TAKEN.has(entry.kind) ? "assumption" : "arithmetic",
-    fails: entry.kind === "check" && !entry.holds,
+    fails: entry.kind === "check" && !entry.holds, value: INPUTS.has(entry.kind) ? valueOf(entry) : "",
     args: [...new Set(Object.values(entry.args ?? {}))], users: [], repeats: [], element: null,
   };
+}
+
+// The value of an input as typed, else as printed, its unit in ASCII.
+function valueOf(entry) {
+  return entry.typed || `${entry.printed.result} ${entry.printed.unit}`.trimEnd();
 }
 
 // As on the page: a title begins with a capital, unless it begins with a symbol.

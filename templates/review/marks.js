@@ -71,6 +71,7 @@ function causesOf(calc, review) {
     if (!known.has(mark.record)) known.set(mark.record, new Map());
     known.get(mark.record).set(mark.line, mark.digest);
   }
+  const values = new Map(review.records.map((each) => [each.digest, new Map(Object.entries(each.values))]));
   const roots = new Map();
   for (const [digest, then] of known) {
     const changed = new Set([...then].filter(([id, old]) => calc.lines.has(id)
@@ -84,10 +85,39 @@ function causesOf(calc, review) {
     if (!found.length || (itself && !INPUTS.has(calc.lines.get(mark.line).kind))) {
       return "the line itself, or one above it that nobody had marked, was written anew";
     }
-    const named = found.slice(0, 12).map((id) => nameOf(calc.lines.get(id))).join(", ");
-    const more = found.length > 12 ? ` and ${found.length - 12} more` : "";
-    return `changed since: ${named}${more}`;
+    const named = found.slice(0, 12)
+      .map((id) => causeTold(calc.lines.get(id), values.get(mark.record)?.get(id) ?? "")).join("; ");
+    const more = found.length > 12 ? `; and ${found.length - 12} more` : "";
+    return `${named}${more}`;
   };
+}
+
+// What has changed: an input with its value when marked, where the review holds it, and now.
+function causeTold(line, was) {
+  const name = nameOf(line);
+  if (!was || !INPUTS.has(line.kind)) return `${name} has changed`;
+  if (was === line.value) return `${name} is ${line.value} as it was, but from another source`;
+  return `${name} was ${valueTold(was)}, is ${valueTold(line.value)}`;
+}
+
+const NUMBER = /^[+-]?(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+)?$/;
+
+// The value of an input as a sentence tells it: 12 kN·m for "12 kN.m".
+function valueTold(text) {
+  const [number, ...rest] = text.split(" ");
+  if (!NUMBER.test(number)) return text;
+  const unit = rest.join(" ");
+  return number.replace(/^-/, "−") + (unit && unit !== "deg" ? " " : "") + unitText(unit);
+}
+
+function unitText(unit) {
+  if (unit === "deg") return "°";
+  return unit.split("/").map((side) => side.split(/[.*](?=[A-Za-z])/).map(factorText).join("·")).join("/");
+}
+
+function factorText(factor) {
+  const [, name, power = ""] = /^([A-Za-z%]+)\^?(-?\d+)?$/.exec(factor) ?? [null, factor];
+  return name + power.replace(/[\d-]/g, (sign) => "⁰¹²³⁴⁵⁶⁷⁸⁹⁻"["0123456789-".indexOf(sign)]);
 }
 
 function rootsOf(calc, changed) {
@@ -110,9 +140,9 @@ function rootsOf(calc, changed) {
 }
 
 function snapshotOf(calc) {
-  const inputs = {};
-  for (const line of calc.lines.values()) if (INPUTS.has(line.kind)) inputs[line.id] = line.digest;
-  return { digest: calc.digest, inputs };
+  const kept = [...calc.lines.values()].filter((line) => INPUTS.has(line.kind));
+  const of = (name) => Object.fromEntries(kept.map((line) => [line.id, line[name]]));
+  return { digest: calc.digest, inputs: of("digest"), values: of("value") };
 }
 
 // Findings -----------------------------------------------------------------------------------
@@ -144,11 +174,13 @@ function merged(first, second) {
   }
   const records = new Map();
   for (const each of [...first.records, ...second.records]) {
-    const inputs = records.get(each.digest) ?? {};
-    for (const [id, digest] of Object.entries(each.inputs)) {
-      inputs[id] = inputs[id] === undefined || digest < inputs[id] ? digest : inputs[id];
+    const kept = records.get(each.digest) ?? { inputs: {}, values: {} };
+    for (const [name, texts] of Object.entries(kept)) {
+      for (const [id, text] of Object.entries(each[name])) {
+        texts[id] = texts[id] === undefined || text < texts[id] ? text : texts[id];
+      }
     }
-    records.set(each.digest, inputs);
+    records.set(each.digest, kept);
   }
   const names = new Map();
   for (const who of [...first.reviewers, ...second.reviewers]) {
@@ -156,7 +188,7 @@ function merged(first, second) {
   }
   return {
     calc: first.calc, reviewers: [...names.values()],
-    records: [...records].map(([digest, inputs]) => ({ digest, inputs })),
+    records: [...records].map(([digest, kept]) => ({ digest, ...kept })),
     findings: numbered([...same.values()]),
     marks: currentMarks(once([...first.marks, ...second.marks])),
     signed: once([...first.signed, ...second.signed]),
@@ -219,8 +251,9 @@ const FIELDS = {
 // An item with its fields in the order of the file, empty ones left out.
 function full(item) {
   if (item.inputs) {
-    const pairs = Object.entries(item.inputs).sort(by((pair) => [pair[0]]));
-    return { digest: item.digest, inputs: Object.fromEntries(pairs) };
+    const ordered = (texts) => Object.fromEntries(Object.entries(texts).sort(by((pair) => [pair[0]])));
+    const made = { digest: item.digest, inputs: ordered(item.inputs) };
+    return Object.keys(item.values).length ? { ...made, values: ordered(item.values) } : made;
   }
   const names = item.kind ? FIELDS.mark : item.number ? FIELDS.finding : Object.keys(item);
   const made = {};
@@ -260,10 +293,11 @@ function fromText(text) {
       return { name: who?.name, initials: who?.initials ?? "" };
     }),
     records: list(data, "records").map((each) => {
-      const inputs = each?.inputs ?? {};
-      need(DIGEST.test(each?.digest) && typeof inputs === "object"
-        && Object.values(inputs).every((digest) => DIGEST.test(digest)), "a record is damaged");
-      return { digest: each?.digest, inputs };
+      const [inputs, values] = [each?.inputs ?? {}, each?.values ?? {}]; // older files hold no values
+      need(DIGEST.test(each?.digest) && typeof inputs === "object" && typeof values === "object"
+        && Object.values(inputs).every((digest) => DIGEST.test(digest))
+        && Object.values(values).every((value) => text_(value)), "a record is damaged");
+      return { digest: each?.digest, inputs, values };
     }),
     findings: list(data, "findings").map((found, n) => {
       need(Number.isInteger(found?.number) && found.number > 0 && SEVERITIES.includes(found.severity)

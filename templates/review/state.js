@@ -134,9 +134,9 @@ class Work {
     const { calc } = this;
     const review = this.review();
     const by = this.enrol(review);
-    if (!review.records.some((each) => each.digest === calc.digest)) {
-      review.records.push(snapshotOf(calc));
-    }
+    const known = review.records.find((each) => each.digest === calc.digest);
+    if (!known) review.records.push(snapshotOf(calc));
+    else if (!Object.keys(known.values).length) Object.assign(known, snapshotOf(calc)); // an older file
     const alike = kind === "arithmetic" && state !== "queried" ? this.line.repeats : [];
     const also = alike.filter((line) => !this.ownMark(line, kind, true));
     const at = now();

@@ -51,7 +51,9 @@ reviews = st.builds(
     Review,
     calc=st.just("B1"),
     reviewers=st.just((Reviewer(NAMES[0], "KM"), Reviewer(NAMES[1], "IO"))),
-    records=st.just((Reviewed(RECORD, {"data/h": DIGEST}),)),
+    records=st.sampled_from([{}, {"data/h": "600 mm"}, {"data/h": "650 mm", "data/b": "1 m"}]).map(
+        lambda values: (Reviewed(RECORD, {"data/h": DIGEST}, values),)
+    ),
     findings=st.lists(
         findings, max_size=4, unique_by=(lambda f: f.number, lambda f: f.origin)
     ).map(tuple),

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import json
-from collections.abc import Callable
+from collections.abc import Callable, Iterable
 from dataclasses import replace
 from typing import Any
 
@@ -12,6 +12,8 @@ import pytest
 from lineproof.audit.data import Severity
 from lineproof.audit.review.data import Kind, Raised, Review, Reviewer, Said, SignOff, State
 from lineproof.audit.review.marks import (
+    Cause,
+    Stale,
     marked,
     originators,
     refused_reviewers,
@@ -20,6 +22,7 @@ from lineproof.audit.review.marks import (
     stale_marks,
     standing,
 )
+from lineproof.audit.review.merge import merge
 from lineproof.audit.review.read import read_review
 from lineproof.errors import UserError
 from lineproof.record import Record
@@ -79,6 +82,9 @@ def test_a_review_reads_back_as_it_was() -> None:
     assert set(again.marks) == set(review.marks)
     assert again.findings == review.findings
     assert dict(again.records[0].inputs).keys() == {"data/b", "data/h", "data/A_s"}
+    assert again.records[0].values == {
+        "data/b": "400 mm", "data/h": "600 mm", "data/A_s": "2000 mm2",
+    }  # fmt: skip
 
 
 def test_the_file_is_json_with_one_item_a_line() -> None:
@@ -129,6 +135,8 @@ def whole() -> dict[str, Any]:
         (lambda d: d["findings"][0].update(responses=[{"by": "", "at": AT}]), "by is missing"),
         (lambda d: d["findings"].append(d["findings"][0]), "finding '1' stands twice"),
         (lambda d: d["records"][0]["inputs"].update(x=1), "record 1: inputs: not a digest of 16"),
+        (lambda d: d["records"][0].update(values=[1]), "record 1: values: a list is no text for"),
+        (lambda d: d["records"][0].update(values={"x": 1}), "record 1: values: 1 is no text"),
         (lambda d: d["reviewers"].append({"name": "Kei Mori"}), "reviewer 'Kei Mori' stands twice"),
         (lambda d: d.update(signed=[{"record": "0" * 16, "by": "K", "on": "1.12."}]), "is no day"),
         (lambda d: d.update(calc=""), "calc is missing or empty"),
@@ -179,6 +187,11 @@ def test_a_damaged_file_is_refused_with_a_sentence(text: str, told: str) -> None
 # Stale ------------------------------------------------------------------------------------------
 
 
+def lines_behind(found: Iterable[Stale]) -> dict[str, tuple[str, ...]]:
+    """Return for each stale line those that caused it."""
+    return {each.mark.line: tuple(cause.line for cause in each.causes) for each in found}
+
+
 def test_nothing_is_stale_while_nothing_has_changed() -> None:
     assert stale_marks(all_marked(beam()), beam()) == ()
 
@@ -186,25 +199,47 @@ def test_nothing_is_stale_while_nothing_has_changed() -> None:
 def test_marks_on_what_rests_on_a_changed_input_turn_stale_and_name_it() -> None:
     """By hand: d rests on h, r and the check on d; a rests on A_s and b only."""
     found = stale_marks(all_marked(beam()), beam(h="650 mm"))
-    assert {each.mark.line: each.causes for each in found} == {
+    assert lines_behind(found) == {
         "data/h": ("data/h",),
         "flexure/d": ("data/h",),
         "flexure/r": ("data/h",),
         "flexure/enough": ("data/h",),
     }
-    assert found[1].why == "data/h has changed"
+    assert found[1].why == "data/h was 600 mm, is 650 mm"
 
 
 def test_two_changed_inputs_are_both_named() -> None:
     found = stale_marks(all_marked(beam()), beam(h="650 mm", b="450 mm"))
-    causes = {each.mark.line: each.causes for each in found}
+    causes = lines_behind(found)
     assert causes["flexure/a"] == ("data/b",)
     assert set(causes["flexure/r"]) == {"data/h", "data/b"}
+    why = {each.mark.line: each.why for each in found}["flexure/r"]
+    assert why == "data/b was 400 mm, is 450 mm; data/h was 600 mm, is 650 mm"
+
+
+def test_a_file_without_values_is_read_and_tells_only_what_has_changed() -> None:
+    """Written before values were kept: it stays as it was to the byte, until marked again."""
+    data = json.loads(all_marked(beam()).to_text())
+    del data["records"][0]["values"]
+    old = read_review(json.dumps(data))
+    assert '"values"' not in old.to_text()
+    assert merge(old, old).review.to_text() == old.to_text()
+    assert stale_marks(old, beam(h="650 mm"))[1].why == "data/h has changed"
+    again = marked(old, beam(), ["data/b"], by="Kei Mori", at="2026-12-02T08:00:00Z")
+    assert [dict(each.values) for each in again.records] == [
+        {"data/b": "400 mm", "data/h": "600 mm", "data/A_s": "2000 mm2"}
+    ]
+
+
+def test_an_input_read_from_another_row_with_the_same_value_is_told_so() -> None:
+    """f_y is 400 MPa for grade 400R as for 400W: "was 400 MPa, is 400 MPa" would puzzle."""
+    made = Cause("materials/f_y", "400 MPa", "400 MPa").told("f_y")
+    assert made == "f_y is 400 MPa as it was, but from another source"
 
 
 def test_a_line_written_anew_is_the_cause_of_what_rests_on_it() -> None:
     found = stale_marks(all_marked(beam()), beam(depth="d = 0.88*h"))
-    assert {each.mark.line: each.causes for each in found} == {
+    assert lines_behind(found) == {
         "flexure/d": (),
         "flexure/r": ("flexure/d",),
         "flexure/enough": ("flexure/d",),
@@ -227,7 +262,7 @@ def test_marks_of_two_issues_name_their_own_causes() -> None:
     review = marked(review, second, ["flexure/a", "flexure/r"], by="Kei Mori", at=AT)
     assert {each.digest for each in review.records} == {first.digest, second.digest}
     found = stale_marks(review, beam(b="450 mm", h="650 mm"))
-    assert {each.mark.line: each.causes for each in found} == {
+    assert lines_behind(found) == {
         "data/h": ("data/h",),
         "flexure/r": ("data/h",),
     }

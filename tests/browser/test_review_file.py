@@ -85,7 +85,7 @@ def test_stale_marks_are_shown_with_their_cause(opened: Open) -> None:
     assert "7 lines have changed since marked" in status(page)
     row(page, "span-1/within").locator(".result").click()
     told = page.locator("[data-rv=marks] li").inner_text()
-    assert told.endswith("arithmetic checked; stale: changed since: 1.2 Depth")
+    assert told.endswith("arithmetic checked; stale: 1.2 Depth was 500 mm, is 600 mm")
     page.keyboard.press("7")
     assert set(shown(page)) == changed
 

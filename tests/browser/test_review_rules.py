@@ -12,9 +12,10 @@ from hypothesis import strategies as st
 from tests.audit.review_random import reviews
 
 from lineproof.audit.review.data import Review, Reviewer
-from lineproof.audit.review.marks import marked, stale_marks, standing
+from lineproof.audit.review.marks import Cause, marked, stale_marks, standing, value_told
 from lineproof.audit.review.merge import merge
 from lineproof.package.html import TOOLS
+from lineproof.quantity.units import UNITS
 from lineproof.record import Record
 from lineproof.resources import folder
 from lineproof.sheet import Sheet
@@ -78,6 +79,16 @@ def beam(**changes: str) -> Record:
     return sheet.close()
 
 
+def test_the_page_tells_values_as_the_command_does(blank: Page) -> None:
+    units = [unit.replace("^0.5", "2") for unit in UNITS]  # no input is of a root of a unit
+    texts = [f"{number} {unit}".strip() for unit in units for number in ("-12.5", "4", "1e-3")]
+    texts += ["6 ft 3 in", "2-25M", "-", ""]
+    told = blank.evaluate(
+        "texts => { RULES; return texts.map(valueTold); }".replace("RULES", RULES), texts
+    )
+    assert told == [value_told(text) for text in texts]
+
+
 CHANGES = {"b": "450 mm", "h": "650 mm", "A_s": "2500 mm2", "line": "d = 0.88*h"}
 SUBSETS = [set_ for size in range(5) for set_ in combinations(CHANGES, size)]
 
@@ -100,9 +111,11 @@ def test_the_page_finds_the_same_stale_lines_and_causes(
     }
 
 
-def _words(causes: tuple[str, ...], record: Record) -> str:
+def _words(causes: tuple[Cause, ...], record: Record) -> str:
     if not causes:
         return "the line itself, or one above it that nobody had marked, was written anew"
     entries: dict[str, Any] = record.entries
-    named = ", ".join(f"{entries[line]['label']} {entries[line]['title']}" for line in causes)
-    return f"changed since: {named}"
+    return "; ".join(
+        cause.told(f"{entries[cause.line]['label']} {entries[cause.line]['title']}")
+        for cause in causes
+    )

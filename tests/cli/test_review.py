@@ -79,7 +79,7 @@ def test_what_is_stale_names_its_cause(calc: Path, capsys: pytest.CaptureFixture
     calc.write_text(beam(h="650 mm").to_text(), encoding="utf-8")
     assert main(["review", str(calc)]) == 1
     out = capsys.readouterr().out
-    assert "stale: Depth (1.1): changed. 3 marks by KM: 1.1, 2.1, 2.2" in out
+    assert "stale: Depth (1.1) was 600 mm, is 650 mm. 3 marks by KM: 1.1, 2.1, 2.2" in out
 
 
 def test_what_is_open_is_listed(calc: Path, capsys: pytest.CaptureFixture[str]) -> None:

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import json
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass, field, fields
+from dataclasses import Field, dataclass, field, fields
 from enum import StrEnum
 from typing import Any
 
@@ -151,13 +151,15 @@ class SignOff:
 
 @dataclass(frozen=True, slots=True)
 class Reviewed:
-    """A record that was reviewed: its digest, and the digest of each of its inputs by id.
+    """A record that was reviewed: its digest, and of each of its inputs by id digest and value.
 
-    Inputs are what is typed, looked up or found; by these a stale mark names its cause.
+    Inputs are what is typed, looked up or found; by these a stale mark names its cause, and what
+    that was ("30 MPa", unit in ASCII). Files of before values were kept hold none.
     """
 
     digest: str
     inputs: Mapping[str, str] = field(hash=False)
+    values: Mapping[str, str] = field(default_factory=dict, hash=False)
 
 
 @dataclass(frozen=True, slots=True)
@@ -233,8 +235,15 @@ def _plain(item: object) -> Any:
         return item.value
     if isinstance(item, str | int):
         return item
-    values = {spec.name: getattr(item, spec.name) for spec in fields(item)}  # type: ignore[arg-type]
-    return {name: _plain(value) for name, value in values.items() if value not in ("", ())}
+    return {
+        spec.name: _plain(value)
+        for spec in fields(item)  # type: ignore[arg-type]
+        if (value := getattr(item, spec.name)) not in ("", ()) and not _is_default(spec, value)
+    }
+
+
+def _is_default(spec: Field[Any], value: object) -> bool:
+    return spec.default_factory is dict and not value
 
 
 def _compact(value: object) -> str:

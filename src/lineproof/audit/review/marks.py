@@ -6,6 +6,7 @@ import re
 import unicodedata
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, replace
+from typing import Any
 
 from lineproof.audit.review.data import (
     Kind,
@@ -22,6 +23,7 @@ from lineproof.errors import UserError
 from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, FOUND, GIVEN, LOOKUP, VALUES
 from lineproof.sentences import counted
+from lineproof.typeset.values import is_number, told
 
 INPUTS = (GIVEN, LOOKUP, FOUND)
 TO_CHECK = (*VALUES, *CRITERIA)
@@ -32,14 +34,48 @@ _PARTED = re.compile(r"[,;/&]|\band\b")
 
 
 @dataclass(frozen=True, slots=True)
+class Cause:
+    """A changed line behind which nothing else has changed, as it was when marked and as it is.
+
+    Both texts are empty for a line that is no input, and where the review holds no values.
+    """
+
+    line: str
+    was: str = ""
+    now: str = ""
+
+    def told(self, name: str) -> str:
+        """Say what has changed.
+
+        >>> Cause("data/f_c", "30 MPa", "35 MPa").told("f_c"), Cause("data/f_c").told("f_c")
+        ('f_c was 30 MPa, is 35 MPa', 'f_c has changed')
+        """
+        if not self.was:
+            return f"{name} has changed"
+        if self.was == self.now:
+            return f"{name} is {self.now} as it was, but from another source"
+        return f"{name} was {value_told(self.was)}, is {value_told(self.now)}"
+
+
+def value_told(text: str) -> str:
+    """Return the value of an input as a sentence tells it.
+
+    >>> value_told("-12.5 kN.m"), value_told("35 deg"), value_told("6 ft 3 in")
+    ('−12.5 kN·m', '35°', '6 ft 3 in')
+    """
+    number, _, unit = text.partition(" ")
+    return told(number, unit) if is_number(number) else text
+
+
+@dataclass(frozen=True, slots=True)
 class Stale:
-    """A mark of a line that has changed since: the ids that caused it, ``gone`` if it is no more.
+    """A mark of a line that has changed since: what caused it, ``gone`` if the line is no more.
 
     Without causes, the line itself was written differently, or one above that nobody marked.
     """
 
     mark: Mark
-    causes: tuple[str, ...] = ()
+    causes: tuple[Cause, ...] = ()
     gone: bool = False
 
     @property
@@ -49,15 +85,25 @@ class Stale:
             return "the line is no longer in the calc"
         if not self.causes:
             return "the line itself, or one above it that nobody had marked, was written anew"
-        verb = "has" if len(self.causes) == 1 else "have"
-        more = f" and {len(self.causes) - MOST_NAMED} more" * (len(self.causes) > MOST_NAMED)
-        return f"{', '.join(self.causes[:MOST_NAMED])}{more} {verb} changed"
+        named = [cause.told(cause.line) for cause in self.causes[:MOST_NAMED]]
+        more = f"; and {len(self.causes) - MOST_NAMED} more" * (len(self.causes) > MOST_NAMED)
+        return "; ".join(named) + more
 
 
 def snapshot(record: Record) -> Reviewed:
     """Return what a review keeps of the record that was reviewed."""
-    inputs = {i: e["digest"] for i, e in record.entries.items() if e["kind"] in INPUTS}
-    return Reviewed(record.digest, inputs)
+    inputs = {i: e for i, e in record.entries.items() if e["kind"] in INPUTS}
+    return Reviewed(
+        record.digest,
+        {line: entry["digest"] for line, entry in inputs.items()},
+        {line: _value(entry) for line, entry in inputs.items()},
+    )
+
+
+def _value(entry: Mapping[str, Any]) -> str:
+    """Return the value of an input as typed, else as printed, its unit in ASCII."""
+    printed = entry["printed"]
+    return str(entry.get("typed") or f"{printed['result']} {printed['unit']}".rstrip())
 
 
 def marked(
@@ -79,8 +125,9 @@ def marked(
         )
         for line in lines
     )  # fmt: skip
-    known = any(each.digest == record.digest for each in review.records)
-    records = review.records if known else (*review.records, snapshot(record))
+    known = any(each.digest == record.digest and each.values for each in review.records)
+    others = tuple(each for each in review.records if each.digest != record.digest)
+    records = review.records if known else (*others, snapshot(record))
     return replace(review, marks=(*review.marks, *made), records=records)
 
 
@@ -89,6 +136,7 @@ def stale_marks(review: Review, record: Record) -> tuple[Stale, ...]:
     now = {entry_id: entry["digest"] for entry_id, entry in record.entries.items()}
     current = [mark for marks in review.current().values() for mark in marks]
     known: dict[str, dict[str, str]] = {each.digest: dict(each.inputs) for each in review.records}
+    values = {each.digest: each.values for each in review.records}
     for mark in current:
         known.setdefault(mark.record, {})[mark.line] = mark.digest
     roots = {
@@ -96,7 +144,7 @@ def stale_marks(review: Review, record: Record) -> tuple[Stale, ...]:
         for digest, then in known.items()
     }
     found = [
-        _stale(mark, record, roots[mark.record])
+        _stale(mark, record, roots[mark.record], values.get(mark.record, {}))
         for mark in current
         if now.get(mark.line) != mark.digest
     ]
@@ -104,13 +152,21 @@ def stale_marks(review: Review, record: Record) -> tuple[Stale, ...]:
     return tuple(sorted(found, key=lambda each: order.get(each.mark.line, len(order))))
 
 
-def _stale(mark: Mark, record: Record, roots: Mapping[str, tuple[str, ...]]) -> Stale:
+def _stale(
+    mark: Mark, record: Record, roots: Mapping[str, tuple[str, ...]], values: Mapping[str, str]
+) -> Stale:
     entry = record.entries.get(mark.line)
     if entry is None:
         return Stale(mark, gone=True)
-    causes = roots.get(mark.line, ())
-    itself = causes == (mark.line,) and entry["kind"] not in INPUTS
-    return Stale(mark, () if itself else causes)
+    lines = roots.get(mark.line, ())
+    itself = lines == (mark.line,) and entry["kind"] not in INPUTS
+    return Stale(mark, () if itself else tuple(_cause(line, record, values) for line in lines))
+
+
+def _cause(line: str, record: Record, values: Mapping[str, str]) -> Cause:
+    entry = record.entries[line]
+    was = values.get(line, "")
+    return Cause(line, was, _value(entry)) if was and entry["kind"] in INPUTS else Cause(line)
 
 
 def _roots(record: Record, changed: set[str]) -> dict[str, tuple[str, ...]]:

@@ -121,13 +121,13 @@ def _marks(marks: Iterable[Mark]) -> tuple[Mark, ...]:
 
 
 def _records(records: Iterable[Reviewed]) -> tuple[Reviewed, ...]:
-    """Return each record once; of one digest both lists of inputs are kept together."""
-    found: dict[str, dict[str, str]] = defaultdict(dict)
+    """Return each record once; of one digest what both hold of its inputs is kept together."""
+    found: dict[str, tuple[dict[str, str], dict[str, str]]] = defaultdict(lambda: ({}, {}))
     for record in records:
-        inputs = found[record.digest]
-        for line, digest in record.inputs.items():
-            inputs[line] = min(inputs.get(line, digest), digest)
-    return tuple(Reviewed(digest, inputs) for digest, inputs in found.items())
+        for kept, given in zip(found[record.digest], (record.inputs, record.values), strict=True):
+            for line, text in given.items():
+                kept[line] = min(kept.get(line, text), text)
+    return tuple(Reviewed(digest, *kept) for digest, kept in found.items())
 
 
 def _findings(findings: Iterable[Raised]) -> tuple[tuple[Raised, ...], list[Conflict]]:

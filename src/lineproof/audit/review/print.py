@@ -138,11 +138,14 @@ class _Words:
         if stale.gone or not 0 < len(stale.causes) <= MOST_LINES // 10:
             return f"{begun(why)}."
         entries = self.record.entries
-        named = ", ".join(
-            f"{entries[line].get('title') or line} ({entries[line].get('label') or line})"
-            for line in stale.causes
+        named = "; ".join(
+            cause.told(
+                f"{entries[cause.line].get('title') or cause.line} "
+                f"({entries[cause.line].get('label') or cause.line})"
+            )
+            for cause in stale.causes
         )
-        return f"{begun(named)}: changed."
+        return f"{begun(named)}."
 
     def conflict(self, each: Conflict) -> str:
         """Say what does not agree, a line by its number and title."""

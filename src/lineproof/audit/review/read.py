@@ -150,7 +150,7 @@ class _Reader:
         )
 
     def reviewed(self, row: Fields) -> Reviewed:
-        self.only(row, ("digest", "inputs"))
+        self.only(row, ("digest", "inputs", "values"))
         inputs = row.get("inputs", {})
         if not isinstance(inputs, dict) or not all(
             isinstance(digest, str) and _DIGEST.match(digest) and len(line) <= LONGEST_TEXT
@@ -159,7 +159,21 @@ class _Reader:
             self.add("inputs: not a digest of 16 letters and digits for each line; save the "
                      "review again from the review page")  # fmt: skip
             inputs = {}
-        return Reviewed(self.digest(row, "digest"), inputs)
+        return Reviewed(self.digest(row, "digest"), inputs, self.values(row))
+
+    def values(self, row: Fields) -> Mapping[str, str]:
+        """Return the values of inputs by line; files of before they were kept have none."""
+        values = row.get("values", {})
+        if not isinstance(values, dict) or len(values) > MOST_ITEMS:
+            self.add(f"values: {shown(values)} is no text for each line; save the review "
+                     "again from the review page")  # fmt: skip
+            return {}
+        return {
+            self.text({"values": line}, "values", LONGEST_TEXT): self.text(
+                {"values": value}, "values", LONGEST_TEXT
+            )
+            for line, value in values.items()
+        }
 
     def finding(self, row: Fields) -> Raised:
         self.only(row, ("number", "severity", "text", "by", "at", "lines", "responses",
