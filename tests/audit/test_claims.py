@@ -136,6 +136,42 @@ def test_symbols_not_known_get_the_nearest_names(graph: Graph, tmp_path: Path) -
     assert "'99.9' is not a line" in said
 
 
+def test_an_id_in_capitals_or_in_another_column_is_understood_or_named(
+    graph: Graph, tmp_path: Path
+) -> None:
+    """The line d of the part beam has the label 2.1: an id is never a label."""
+    label = graph["beam/d"].label
+    (claim,) = read(graph, tmp_path, "label,claimed\nbeam/d,539 mm\n")
+    assert claim.id == "beam/d"
+    assert faults(graph, tmp_path, f"id,claimed\nBEAM/D,1 mm\n{label},1 mm\n") == (
+        "row 2, id: 'BEAM/D' is not a line of this calc; write 'beam/d'",
+        (
+            f"row 3, id: '{label}' is not a line of this calc, but a label; "
+            "write it under the heading 'label'"
+        ),
+    )
+
+
+def test_a_row_whose_symbol_is_that_of_another_line_is_refused(
+    graph: Graph, tmp_path: Path
+) -> None:
+    """As after one column of a spreadsheet was sorted and not the others."""
+    said = faults(graph, tmp_path, "id,symbol,claimed\nbeam/d,a,539 mm\nbeam/a,a,62 mm\n")
+    assert said == (
+        (
+            "row 2, symbol: 'a', but beam/d is d; see whether columns were sorted apart, and "
+            "write both of one line"
+        ),
+    )
+    own_way = read(graph, tmp_path, "id,symbol,claimed\nbeam/d,d (eff.),539 mm\n")
+    assert [claim.id for claim in own_way] == ["beam/d"]
+
+
+def test_units_may_stand_under_a_heading_in_the_plural(graph: Graph, tmp_path: Path) -> None:
+    (claim,) = read(graph, tmp_path, "id,claimed,units\nbeam/d,539,mm\n")
+    assert (claim.typed, claim.unit) == ("539", "mm")
+
+
 def test_a_title_above_the_headings_is_named(graph: Graph, tmp_path: Path) -> None:
     text = "Beam B1,,\n,,\nid,claimed,unit\nbeam/d,539,mm\n"
     assert faults(graph, tmp_path, text) == ("row 3 holds the headings; delete the rows above it",)
@@ -144,8 +180,14 @@ def test_a_title_above_the_headings_is_named(graph: Graph, tmp_path: Path) -> No
 @pytest.mark.parametrize(
     ("text", "said"),
     [
-        ("id,mine\nbeam/d,539\n", "no heading 'claimed'; write 'id,claimed,unit'"),
-        ("name,claimed\nbeam/d,539\n", "no heading 'id', 'label' or 'symbol'; write 'id'"),
+        (
+            "id,mine\nbeam/d,539\n",
+            "no heading 'claimed' among 'id', 'mine'; write 'id,claimed,unit'",
+        ),
+        (
+            "name,claimed\nbeam/d,539\n",
+            "no heading 'id', 'label' or 'symbol' among 'name', 'claimed'; write 'id'",
+        ),
         ("id,claimed\nbeam/d,\n", "no row has a value in the column 'claimed'; write one"),
     ],
 )
@@ -191,6 +233,27 @@ def test_bars_claimed_for_their_area_are_read_by_the_bar_table(
         "Bars are read as their area by the bar table (CSA G30.18): A_s (2.2) 3-20M as 900 mm².",
     )
     assert "900 mm² (3-20M) does not follow" in audit.findings[0].what
+
+
+@pytest.mark.parametrize(
+    ("typed", "said"),
+    [
+        # 4 x 300 mm2 by the bar table (CSA G30.18); 4 pi 20^2/4 = 1256.6 mm2.
+        ("4Ø20", "may be 4-20M (1200 mm2) or 4 round bars of 20 mm (1257 mm2); write '4-20M', or"),
+        # 3 x 500 mm2; 3 pi 25^2/4 = 1472.6 mm2.
+        ("3 - ø 25 mm", "may be 3-25M (1500 mm2) or 3 round bars of 25 mm (1473 mm2); write"),
+        ("4Ø16", "names bars in a way that is not read; write them such as '4-20M'"),
+        ("4-20M (bottom)", "names bars in a way that is not read; write them such as '4-20M'"),
+        ("4-20M E.F.", "or write their area such as '1200 mm2'"),
+        ("1200 (4-20M)", "names bars in a way that is not read"),
+    ],
+)
+def test_bars_with_more_than_one_reading_are_refused(
+    graph: Graph, tmp_path: Path, typed: str, said: str
+) -> None:
+    """Bars by diameter are not those of the standard, and each face may double a number."""
+    (fault,) = faults(graph, tmp_path, f"id,claimed\nbeam/A_s,{typed}\n")
+    assert said in fault
 
 
 def test_bars_over_a_web_and_its_overhangs_are_whole_bars(tmp_path: Path) -> None:

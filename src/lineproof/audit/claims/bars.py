@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import re
 from collections.abc import Iterable
 from decimal import Decimal
@@ -18,6 +19,8 @@ from lineproof.typeset.values import told
 
 _GROUP = re.compile(r"(\d{1,3})(?: ?[-–x×] ?| )(\d{2}M)\Z", re.ASCII | re.IGNORECASE)
 _BETWEEN = re.compile(r" ?(?:[+/]|\band\b) ?")
+_BY_DIAMETER = re.compile(r"(\d{1,3}) ?-? ?[ØøφΦ⌀] ?(\d{2})(?: ?mm)?\Z", re.ASCII)
+_NAMED = re.compile(r"(?<![\d.])\d\dM\b|[ØøφΦ⌀]", re.ASCII)
 _GIVEN_AREAS = ("A_s", "A_sp")
 """Areas of bars that a calculation of a section may take as given: in tension, in compression."""
 
@@ -48,6 +51,32 @@ def area_claimed(graph: Graph, node: Node, text: str) -> str:
         )
     areas = [n * Decimal(BARS.row(size, node.symbol)["A_b"]) for n, size in bars_in(text)]
     return f"{sum(areas)}"
+
+
+def refuse_other_bars(graph: Graph, node: Node, text: str) -> None:
+    """Refuse a text that names bars in a form with more than one reading, and say which.
+
+    4 Ø20 may be four bars 20M (1200 mm2) or four round bars of 20 mm (1257 mm2): their areas
+    differ, so none is taken. Raises :class:`UserError` with what to write.
+    """
+    if not _NAMED.search(text) or bars_in(text):
+        return
+    if not _is_of_whole_bars(graph, node):
+        return
+    by_diameter = _BY_DIAMETER.match(text)
+    size = f"{by_diameter[2]}M" if by_diameter else ""
+    if not by_diameter or size not in BARS.rows:
+        raise UserError(
+            f"{node.symbol}: {echo(text)} names bars in a way that is not read; write them such as "
+            "'4-20M' or '2-25M + 2-20M', or write their area such as '1200 mm2'"
+        )
+    number, diameter = int(by_diameter[1]), int(by_diameter[2])
+    metric = number * Decimal(BARS.row(size, node.symbol)["A_b"])
+    raise UserError(
+        f"{node.symbol}: {echo(text)} may be {number}-{size} ({metric} mm2) or {number} round bars "
+        f"of {diameter} mm ({number * math.pi * diameter**2 / 4:.0f} mm2); write "
+        f"'{number}-{size}', or the area meant"
+    )
 
 
 def _is_of_whole_bars(graph: Graph, node: Node) -> bool:

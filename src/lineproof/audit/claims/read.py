@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from functools import cached_property
 from pathlib import Path
 
-from lineproof.audit.claims.bars import area_claimed, bars_in
+from lineproof.audit.claims.bars import area_claimed, bars_in, refuse_other_bars
 from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.claims.tables import Row, Table, TableFaults, read_with_faults
 from lineproof.audit.claims.typed import DATE_ADVICE, is_date, read_claimed
@@ -29,6 +29,7 @@ _GREEK = {
 _FIRST = 20
 """So many rows are looked through for headings that stand below a title."""
 _MOST_PLACES = 6
+_MOST_HEADINGS = 8
 _LONGEST_WHERE = 40
 
 
@@ -48,10 +49,11 @@ def claims_of(graph: Graph, table: Table, faults: TableFaults) -> tuple[Claim, .
     lower = _headings_below(table)
     if column is None and lower:
         raise UserError(f"{table.name}: row {lower} holds the headings; delete the rows above it")
+    held = ", ".join(echo(heading) for heading in table.headings[:_MOST_HEADINGS] if heading)
     if column is None:
-        faults.add("row 1: no heading 'claimed'; write 'id,claimed,unit'")
+        faults.add(f"row 1: no heading 'claimed' among {held}; write 'id,claimed,unit'")
     if not any(name in table.headings for name in NAMES):
-        faults.add("row 1: no heading 'id', 'label' or 'symbol'; write 'id'")
+        faults.add(f"row 1: no heading 'id', 'label' or 'symbol' among {held}; write 'id'")
     if column is None or not any(name in table.headings for name in NAMES):
         faults.raise_if_any()
     reader = _Reader(graph, faults)
@@ -126,19 +128,32 @@ class _Reader:
         return None
 
     def _named(self, row: Row, column: str, text: str) -> Node | None:
-        known = self.labels.get(text, "") if column == "label" else text
+        # An id is no label, so it names its line there too; a label among the ids does not: a
+        # spreadsheet makes 1.1 of 1.10.
+        known = self.labels.get(text, text) if column == "label" else text
         node = self.graph.nodes.get(known)
         if node is not None and not node.has_value:
             fault = f"{echo(text)} is a {node.kind} and has no value; claim the lines it compares"
             self.faults.at(row.number, column, fault)
             return None
         if node is not None:
-            return node
+            return self._not_another(row, node)
         if column != "label" and text in self.symbols:
             return self._by_symbol(row, column, text)
         self.faults.at(
             row.number, column, f"{echo(text)} is not a line of this calc{self._hint(text)}"
         )
+        return None
+
+    def _not_another(self, row: Row, node: Node) -> Node | None:
+        """Refuse a row whose symbol is that of another line, as after one column was sorted."""
+        symbol = row.cells.get("symbol", "")
+        if symbol in ("", node.symbol) or symbol not in self.symbols:
+            return node
+        self.faults.at(
+            row.number, "symbol", f"{echo(symbol)}, but {node.id} is {node.symbol}; see whether "
+            "columns were sorted apart, and write both of one line"
+        )  # fmt: skip
         return None
 
     def _by_symbol(self, row: Row, column: str, symbol: str) -> Node | None:
@@ -171,8 +186,12 @@ class _Reader:
             return ""  # no longer told, and looking takes long
         if is_date(text):
             return f"; a spreadsheet made a date of it, so {DATE_ADVICE}"
+        if text in self.labels:
+            return ", but a label; write it under the heading 'label'"
         names = [*self.symbols, *(node.id for node in self.graph if node.has_value)]
-        alike = [symbol for symbol in self.symbols if _folded(symbol) == _folded(text[:80])]
+        alike = [name for name in names if name.lower() == text.lower()] or [
+            symbol for symbol in self.symbols if _folded(symbol) == _folded(text[:80])
+        ]
         near = alike or difflib.get_close_matches(text[:80], names, n=3, cutoff=0.6)
         return f"; write {' or '.join(map(repr, near))}" if near else "; take the id of a blank"
 
@@ -183,7 +202,9 @@ class _Reader:
         bars = text if bars_in(text) else ""
         try:
             text = f"{area_claimed(self.graph, node, bars)} mm2" if bars else text
-            read = read_claimed(node, text, row.cells.get("unit", ""))
+            unit = row.cells.get("unit") or row.cells.get("units", "")
+            refuse_other_bars(self.graph, node, text)
+            read = read_claimed(node, text, unit)
         except UserError as error:
             self.faults.at(row.number, "claimed", error.faults[0])
             return None
