@@ -98,6 +98,26 @@ def test_bars_that_run_through_have_what_the_others_leave() -> None:
     assert not effect.holds_as_claimed
 
 
+def test_other_bars_of_the_same_area_are_not_the_bars_of_the_calc() -> None:
+    # 20M has 300 mm2, 15M 200 mm2, 30M 700 mm2 (CSA G30.18): 4 x 300 = 6 x 200 = 1200.
+    (thinner,) = found({("bars", "T03"): "6-15M"})
+    assert thinner.what == "Bars, T03: drawn 6-15M, 4-20M in the calc."
+    assert (thinner.severity, thinner.effects) == (OBSERVATION, ())
+
+    # 10M has 100 mm2: one leg of 15M stands for two of 10M.
+    (other,) = found({("stirrups", "span 1, zone 1"): "1 leg 15M"})
+    assert other.severity == MAJOR
+    assert "Larger bars need longer development" in other.advice
+
+
+def test_more_area_by_larger_bars_is_not_on_the_safe_side() -> None:
+    """3-25M have 1500 mm2 for the 1200 of 4-20M; laps and development are those of 20M."""
+    (finding,) = found({("bars", "B01"): "3-25M"})
+    assert finding.severity == MAJOR
+    assert "Larger bars need longer development, hooks and laps" in finding.advice
+    assert "On the safe side" not in finding.advice
+
+
 def test_more_steel_is_an_observation() -> None:
     (finding,) = found({("bars", "B04"): "3-20M"})
 

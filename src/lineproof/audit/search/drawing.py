@@ -74,10 +74,11 @@ CLAUSES = {
 _SECTION = "geometry"
 _REVISIONS = "drawings"
 _SAME = 0.5
-_BARS = re.compile(r"(\d{1,3})\s*[- x×]?\s*(\d\dM)", re.IGNORECASE)
-_LEGS = re.compile(r"(\d{1,2})\s*(?:legs?|[- x×])?\s*(?:of\s+)?(\d\dM)", re.IGNORECASE)
+_BARS = re.compile(r"(\d{1,3})\s*[-– x×]?\s*(\d\dM)", re.IGNORECASE | re.ASCII)
+_LEGS = re.compile(r"(\d{1,2})\s*(?:legs?|[-– x×])?\s*(?:of\s+)?(\d\dM)", re.IGNORECASE | re.ASCII)
 _FORMS = {"open": 0.0, "closed": 1.0}
 _SHOWN_FAULTS = 40
+_THICKER = "Larger bars need longer development, hooks and laps, which the effects do not hold."
 
 
 @dataclass(frozen=True, slots=True)
@@ -241,12 +242,13 @@ _READERS: Mapping[str, Callable[[str], float]] = {
 
 def _compared(graph: Graph, item: Item, drawn: Drawn) -> Iterator[Finding]:
     difference = drawn.value - item.value
-    if abs(difference) < WITHIN.get(item.name, _SAME):
+    other = _other_bars(item, drawn)
+    if abs(difference) < WITHIN.get(item.name, _SAME) and other == 0:
         return
     changes = item.changes(drawn.value)
     effects = effects_of(graph, changes, DRAWN) if changes else ()
     less = difference * item.more < 0
-    worse = item.more == 0 or less
+    worse = item.more == 0 or less or other > 0
     severity = _severity(item, effects, worse=worse)
     place = "" if item.place == WHOLE else f", {item.place}"
     yield Finding(
@@ -255,9 +257,26 @@ def _compared(graph: Graph, item: Item, drawn: Drawn) -> Iterator[Finding]:
         f"{begun(item.name)}{place}: drawn {drawn.text}, {item.text} in the calc{_where(drawn)}.",
         item.ids,
         CLAUSES.get(item.name, _SECTION),
-        _advice(item, graph, changes, harmless=severity == Severity.OBSERVATION),
+        _advice(item, graph, changes, harmless=severity == Severity.OBSERVATION, thicker=other > 0),
         effects,
     )
+
+
+def _other_bars(item: Item, drawn: Drawn) -> int:
+    """Return 1 where bars or stirrups are drawn of a larger size, -1 for others than the calc's.
+
+    Bars of the same area are not the same bars: 3-25M for 5-20M need longer laps and development.
+    """
+    pattern = {BARS_ITEM: _BARS, STIRRUPS_ITEM: _LEGS}.get(item.name)
+    if pattern is None:
+        return 0
+    own, other = (pattern.fullmatch(text.strip()) for text in (item.text, drawn.text))
+    if own is None or other is None:
+        return 0
+    if (int(own[1]), own[2].upper()) == (int(other[1]), other[2].upper()):
+        return 0
+    diameters = [BARS.number(found[2].upper(), "d_b") for found in (own, other)]
+    return 1 if diameters[1] > diameters[0] else -1
 
 
 def _severity(item: Item, effects: Sequence[Effect], *, worse: bool) -> Severity:
@@ -268,8 +287,14 @@ def _severity(item: Item, effects: Sequence[Effect], *, worse: bool) -> Severity
     return Severity.OBSERVATION
 
 
-def _advice(item: Item, graph: Graph, changes: Mapping[str, float], *, harmless: bool) -> str:
-    said = (_what_to_do(item, harmless=harmless), turned_sentence(graph, changes, DRAWN))
+def _advice(
+    item: Item, graph: Graph, changes: Mapping[str, float], *, harmless: bool, thicker: bool
+) -> str:
+    said = (
+        _what_to_do(item, harmless=harmless),
+        _THICKER * thicker,
+        turned_sentence(graph, changes, DRAWN),
+    )
     return " ".join(filter(None, said))
 
 
