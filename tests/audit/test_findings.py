@@ -158,3 +158,36 @@ def test_a_finding_raised_in_a_review_starts_with_a_capital() -> None:
     assert [raised.text.partition(":")[0] for raised in made.findings] == [
         "Overall depth, span 1 (3.1)"
     ]
+
+
+def test_a_slip_that_another_claim_speaks_against_comes_later_and_says_so() -> None:
+    """By hand: w = 5 x 4 = 20 kN/m, R = 20 x 8/2 = 80 kN, M = 20 x 8^2/8 = 160 kN.m.
+
+    M of 320 is w l^2/4; or w = 5 x 8 with l for s, but then R were 160 kN as well.
+    """
+    lines = {"w = q*s": "kN/m", "R = w*l/2": "kN", "M = w*l**2/8": "kN.m"}
+    record = hand.sheet_of(lines, {"q": "5 kPa", "s": "4 m", "l": "8 m"}).close()
+    (alone,) = found(record, {"beam/R": "80.0", "beam/M": "320"})
+    assert alone.advice.startswith("Reproduced exactly with w*l**2/4 (coefficient)")
+    assert "carries on to the claim, though R (2.2, ) rests on it as well and is right" in (
+        alone.advice
+    )
+    both = found(record, {"beam/R": "160", "beam/M": "320"})
+    moment = next(finding for finding in both if finding.ids == ("beam/M",))
+    assert moment.advice.startswith("Reproduced exactly with l (1.3, ) = 8 m in place of s")
+    assert "though" not in moment.advice
+
+
+def test_an_unlikely_slip_is_told_as_chance_where_two_may_stand_behind_it() -> None:
+    """phi_s left out and d measured to the underside of the bars, two slips in one line.
+
+    1200 x 400 x (600 - 40 - 11.3 - 64.98/2) = 247.8 kN.m; f_y read as 480 gives, by chance,
+    0.85 x 1200 x 480 x (538.95 - 64.98/2) = 248.0 kN.m. One slip, phi_s left out, gives
+    1200 x 400 x (538.95 - 64.98/2) = 243.1 kN.m, and needs no such remark.
+    """
+    right = {"beam/d": "539", "beam/a": "65.0"}
+    (two,) = found(beam(), {**right, "strength/M_r": "248"})
+    assert "typed as 480 in place of 400" in two.advice
+    assert "It may fit by chance: see whether two slips were made in this line." in two.advice
+    (one,) = found(beam(), {**right, "strength/M_r": "243"})
+    assert "by chance" not in one.advice

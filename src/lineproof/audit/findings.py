@@ -20,6 +20,9 @@ FOUND = (
 """Verdicts that a checker writes down; what a line carries is told at its origin."""
 _MOST_EFFECTS = 300
 """So many findings get their effects; more of them say that the claims are of another beam."""
+_BY_CHANCE = 0.03
+"""A slip that is no mistake known by name, and less likely than this, fits many a number."""
+_CHANCE = "It may fit by chance: see whether two slips were made in this line."
 _SMALL = 0.02
 """A check that the right value uses up more by so little is no major matter while it holds."""
 _NO_CHECK = "No check of the calc changes by it."
@@ -118,7 +121,10 @@ def _advice(graph: Graph, judged: Judged) -> str:
     if judged.verdict is Verdict.DOUBTFUL:
         return "Doubtful, not proved an error: ask which of the two was done."
     if judged.slips:
-        return begun(judged.slips[0].sentence)
+        likeliest = judged.slips[0]
+        known = any(cause.usual for cause in likeliest.causes)
+        chance = f" {_CHANCE}" if likeliest.likely < _BY_CHANCE and not known else ""
+        return f"{begun(likeliest.sentence)}{chance}"
     if judged.verdict is Verdict.ORIGIN:
         return none_fits(graph, judged.id)
     if judged.verdict is Verdict.INPUT:

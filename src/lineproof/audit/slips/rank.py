@@ -30,7 +30,8 @@ _SAME = 1e-9
 class Fit(NamedTuple):
     """An edit that reproduces the claim: its value and half width at the claim, and its share.
 
-    ``where`` says in which line, if not in the claimed one.
+    ``where`` says in which line, if not in the claimed one; ``above`` is that line's id and ``own``
+    its value with the slip.
     """
 
     edit: Edit
@@ -38,6 +39,8 @@ class Fit(NamedTuple):
     half: float
     share: float
     where: str = ""
+    above: str = ""
+    own: float = 0.0
 
 
 def shares(edits: Sequence[Edit]) -> dict[str, float]:

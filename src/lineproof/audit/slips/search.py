@@ -9,12 +9,13 @@ from types import MappingProxyType
 
 from lineproof.audit.data import Claim, Interval, Slip
 from lineproof.audit.graph import Graph, Node
+from lineproof.audit.slips.against import Witnesses
 from lineproof.audit.slips.bindings import edits_of_arguments, edits_of_bindings
 from lineproof.audit.slips.carry import Carrier, Onward, fitting, may_reach, reach_of
 from lineproof.audit.slips.edits import TOP, Edit, Line, edits_of, words_of
 from lineproof.audit.slips.kinds import FAMILIES
 from lineproof.audit.slips.numbers import edits_of_numbers
-from lineproof.audit.slips.rank import Fit, ranked, shares
+from lineproof.audit.slips.rank import Fit, likely, ranked, shares
 from lineproof.audit.slips.scope import Pairs, Scope, scope_of
 from lineproof.audit.slips.tree import Pair, Places
 from lineproof.audit.slips.values import others_for
@@ -32,6 +33,10 @@ NOTHING: Mapping[str, str] = MappingProxyType({})
 """No number of a table: each line is searched up to the inputs."""
 WHEREVER = ", wherever it is used"
 """What is said of a value above the claim, in words that follow those of the slip."""
+CONTRADICTED = 0.05
+"""So much less likely is a slip above a claim that another claimed line would show."""
+ASKED = 24
+"""So many of the likeliest slips above a claim are held against the other claimed lines."""
 MOST_KEPT = 400
 """Edits of so many lines are kept while one table of claims is searched."""
 
@@ -127,6 +132,7 @@ class SlipSearch:
     _pairs: Pairs = field(init=False, repr=False)
     _scope: Scope = field(init=False, repr=False)
     _carrier: Carrier = field(init=False, repr=False)
+    _witnesses: Witnesses = field(init=False, repr=False)
     _lines: dict[str, Line | None] = field(default_factory=dict, init=False, repr=False)
     _above: dict[str, Tried | None] = field(default_factory=dict, init=False, repr=False)
 
@@ -135,6 +141,8 @@ class SlipSearch:
         object.__setattr__(self, "_scope", scope_of(self.graph))
         carrier = Carrier(self._scope, self._pairs, self._line)
         object.__setattr__(self, "_carrier", carrier)
+        witnesses = Witnesses(self._scope, self._pairs, self.used, self.claimed)
+        object.__setattr__(self, "_witnesses", witnesses)
 
     @property
     def asked(self) -> tuple[Graph, Mapping[str, Interval], Mapping[str, str]]:
@@ -161,7 +169,30 @@ class SlipSearch:
             if above in reach.lines:
                 where = f", in {words_of(self._scope, above)}, which carries on to the claim"
             fits += _fits(tried, target, onward, math.exp(-FARTHER * distance), where)
-        return ranked(fits, claim)
+        return ranked(self._weighed(fits, entry_id, claim), claim)
+
+    def _weighed(self, fits: Sequence[Fit], entry_id: str, claim: Claim) -> list[Fit]:
+        """Return the fits, the likeliest of those above the claim held against other claims.
+
+        What made the line above wrong would show in every claimed line that rests on it, unless
+        it was worked anew for this claim alone: such a slip is less likely, and is told so.
+        """
+        order = sorted(range(len(fits)), key=lambda at: -likely(fits[at], claim))
+        weighed = list(fits)
+        asked = 0
+        for at in order:
+            fit = fits[at]
+            if not fit.above:
+                continue
+            if asked == ASKED:
+                break
+            asked += 1
+            witness = self._witnesses.against(entry_id, fit.above, fit.own)
+            if witness:
+                name = words_of(self._scope, witness)
+                where = f"{fit.where}, though {name} rests on it as well and is right"
+                weighed[at] = fit._replace(share=fit.share * CONTRADICTED, where=where)
+        return weighed
 
     def _line(self, entry_id: str) -> Line | None:
         if entry_id not in self._lines:
@@ -275,19 +306,23 @@ def _fits(
             continue  # the claim itself, or what only repeats it, explains nothing above it
         made = _worked(tried.line, edit, target, onward)
         if made is not None:
-            yield Fit(edit, *made, tried.share[edit.family] * nearness, where)
+            value, half, own = made
+            above = "" if onward is None else tried.line.node.id
+            share = tried.share[edit.family] * nearness
+            yield Fit(edit, value, half, share, where, above, own)
 
 
 def _worked(
     line: Line, edit: Edit, target: Target, onward: Onward | None
-) -> tuple[float, float] | None:
-    """Return value and half width at the claim, if they meet what it stands for."""
+) -> tuple[float, float, float] | None:
+    """Return value and half width at the claim, if they meet what it stands for, and the line's."""
     try:
         value, half = line.places.with_places(dict.fromkeys(edit.at, (edit.value, edit.half)))
+        own = value
         if onward is not None:
             spread = onward.quick(value + half) - onward.quick(value) if half else 0.0
             value, half = onward.exact(value), abs(spread) + target.half
     except NOT_COMPUTED:
         return None
     meets = target.claim.stands_for.meets(Interval(value - half, value + half))
-    return (value, half) if meets else None
+    return (value, half, own) if meets else None
