@@ -182,6 +182,17 @@ def test_a_page_without_its_record_is_stripped_and_compared_with_one_given() -> 
     assert checked(stripped.replace(">4<", ">5<", 1), against).alterations != ()
 
 
+def test_a_page_with_prose_and_without_its_record_is_stripped_too() -> None:
+    """As issued from a notebook: prose stands among the lines, and no record names its place."""
+    start = by.html(prose=True).index('<script type="application/vnd.lineproof.record+json"')
+    end = by.html(prose=True).index("</script>", start) + len("</script>")
+    stripped = by.html(prose=True)[:start] + by.html(prose=True)[end:]
+
+    assert checked(stripped).outcome is Outcome.STRIPPED
+    assert [outside.after for outside in checked(stripped).outside] == ["", ""]
+    assert checked(stripped, Source(by.record(), by.PROSE)).alterations == ()
+
+
 def test_a_page_of_others_is_not_ours() -> None:
     assert checked("<html><body>M = 551 kN.m</body></html>").outcome is Outcome.NOT_OURS
 

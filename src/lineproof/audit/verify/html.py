@@ -311,7 +311,9 @@ class _Compared:
 
 def _prefixes(records: Sequence[Record]) -> list[str]:
     """Return what stands before the anchors of each calculation, as the package has it."""
-    return [calc.anchor for calc in build_package(records).calcs] if len(records) > 1 else [""]
+    if len(records) > 1:
+        return [calc.anchor for calc in build_package(records).calcs]
+    return [""] * len(records)  # none for a page without its record
 
 
 def _dense(text: str) -> str:
