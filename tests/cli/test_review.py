@@ -184,6 +184,35 @@ def test_wrong_input_gets_a_sentence(
     assert sorted(calc.parent.iterdir()) == files
 
 
+def test_a_review_file_may_stand_behind_the_calc(
+    calc: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    path = save(calc.parent, "km.json", review_of(beam()))
+    other = save(calc.parent, "io.json", review_of(beam(), OTT))
+    assert main(["review", str(calc), str(path), str(other)]) == 0
+    assert "reviewed by Ines Ott (IO), Kei Mori (KM)" in capsys.readouterr().out
+    assert main(["review", str(path)]) == 2
+    told = capsys.readouterr().err
+    assert "km.json: is a review, not a calc; give the notebook, package or record" in told
+    assert "'lineproof review CALC km.json'" in told
+
+
+@pytest.mark.parametrize("ending", ["html", "pdf"])
+def test_a_package_without_a_file_beside_it_gives_the_review_printed_in_it(
+    beam_file: Path, ending: str, capsys: pytest.CaptureFixture[str]
+) -> None:
+    record = read_calc(beam_file).record
+    save(beam_file.parent, "beam.review.json", review_of(record))
+    assert main(["issue", str(beam_file)]) == 0
+    package = beam_file.parent / "issued" / f"beam.{ending}"
+    capsys.readouterr()
+    assert main(["review", str(package)]) == 0
+    assert f"B1: record {record.digest}, reviewed by Kei Mori (KM)" in capsys.readouterr().out
+    save(package.parent, "beam.review.json", review_of(record, OTT))
+    assert main(["review", str(package)]) == 0
+    assert "reviewed by Ines Ott (IO)" in capsys.readouterr().out
+
+
 def test_issue_prints_the_review_that_lies_beside_the_notebook(
     beam_file: Path, capsys: pytest.CaptureFixture[str]
 ) -> None:

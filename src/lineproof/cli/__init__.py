@@ -168,8 +168,12 @@ def _add_review(commands: _Commands[argparse.ArgumentParser]) -> None:
     )
     review.add_argument("calc", type=Path, metavar="CALC", help="notebook, PDF, HTML or record")
     review.add_argument(
-        "--marks", type=Path, nargs="+", metavar="FILE",
-        help="files of reviewers (default: the .review.json beside CALC)",
+        "files", type=Path, nargs="*", metavar="FILE",
+        help="files of reviewers (default: the .review.json beside CALC, else what is printed in "
+        "the package)",
+    )  # fmt: skip
+    review.add_argument(
+        "--marks", type=Path, nargs="+", default=[], metavar="FILE", help="the same",
     )  # fmt: skip
     review.add_argument("--merge", type=Path, metavar="OUT", help="write all marks into one file")
     review.add_argument("--sign", metavar="NAME", help="sign off, if nothing stands open")

@@ -14,7 +14,12 @@ from lineproof.cli.files import write_all
 from lineproof.cli.lines import MOST_NAMED
 from lineproof.errors import FaultList, UserError
 from lineproof.notebook.records import read_records
-from lineproof.notebook.reviews import beside, read_review_file, refuse_originators
+from lineproof.notebook.reviews import (
+    beside,
+    read_review_file,
+    refuse_originators,
+    review_inside,
+)
 from lineproof.record import Record
 from lineproof.typeset import printable
 
@@ -28,10 +33,11 @@ def run(options: argparse.Namespace) -> int:
     """Show how a review stands; returns 1 while anything stands open."""
     from lineproof.audit.review.marks import sign, standing  # noqa: PLC0415 - 0.1 s
 
-    files = options.marks or [beside(options.calc)]
+    given = [*options.files, *options.marks]
+    files = given or [beside(options.calc)]
     _check_places(options, files)
     records = read_records(options.calc)
-    made = _merged(files)
+    made = _merged(files, None if given else review_inside(options.calc))
     review = made.review
     record = _record_of(review, records, options.calc)
     refuse_originators(review, record)
@@ -60,10 +66,15 @@ def _check_places(options: argparse.Namespace, files: Sequence[Path]) -> None:
     faults.raise_if_any()
 
 
-def _merged(files: Sequence[Path]) -> Merged:
-    """Read all files and make one review of them; raises with the faults of all."""
+def _merged(files: Sequence[Path], inside: Review | None) -> Merged:
+    """Read all files and make one review of them; raises with the faults of all.
+
+    ``inside`` is what the package itself holds, for where no file lies beside it.
+    """
     from lineproof.audit.review.merge import Merged, conflicts, merge  # noqa: PLC0415 - as in run
 
+    if inside is not None and not files[0].exists():
+        return Merged(inside, conflicts(inside))
     faults, reviews = FaultList(), []
     for path in files:
         try:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable
 from pathlib import Path
 
@@ -11,6 +12,7 @@ from lineproof.resources import read_file
 
 LARGEST_FILE = 64_000_000
 """More than any package holds."""
+_REVIEW = re.compile(r'\ufeff?\s*\{\s*"schema"\s*:\s*"lineproof review')
 
 
 def altered_lines(record: Record) -> list[str]:
@@ -65,4 +67,10 @@ def _from_html(path: Path) -> list[Record]:
 
 
 def _from_json(path: Path) -> list[Record]:
-    return [Record.from_text(read_file(path, LARGEST_FILE).decode())]
+    text = read_file(path, LARGEST_FILE).decode()
+    if _REVIEW.match(text):
+        raise UserError(
+            f"{path}: is a review, not a calc; give the notebook, package or record that it is "
+            f"of, as in 'lineproof review CALC {path.name}'"
+        )
+    return [Record.from_text(text)]

@@ -16,7 +16,7 @@ if TYPE_CHECKING:
 
 _NO_REVIEW = (
     "no such file; open the HTML package in a browser, choose Review, mark lines, and save the "
-    "file there, or name it with --marks FILE"
+    "file there, or name the file behind CALC"
 )
 
 
@@ -54,6 +54,25 @@ def printed_beside(calc: Path, record: Record) -> PrintedReview | None:
     from lineproof.audit.review.print import printed_review  # noqa: PLC0415 - seldom needed
 
     return printed_review(review, record)
+
+
+def review_inside(package: Path) -> Review | None:
+    """Return the review that was printed with an HTML or PDF package, None for none or several.
+
+    Raises :class:`UserError` for one that is damaged.
+    """
+    from lineproof.audit.review.read import read_review  # noqa: PLC0415 - 0.1 s
+    from lineproof.package.read import reviews_in_html, reviews_in_pdf  # noqa: PLC0415 - as above
+
+    ending = package.suffix.lower()
+    if ending not in (".html", ".pdf") or not package.is_file():
+        return None
+    content = read_file(package, LARGEST_FILE)
+    found = reviews_in_pdf(content) if ending == ".pdf" else reviews_in_html(content.decode())
+    try:
+        return read_review(found[0]) if len(found) == 1 else None
+    except UserError as error:
+        raise UserError([f"{package}: {fault}" for fault in error.faults]) from None
 
 
 def read_review_file(path: Path) -> Review:
