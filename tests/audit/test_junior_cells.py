@@ -331,7 +331,11 @@ OTHER_LINE = 'sheet.line("A_s = 2*n_b*A_b", unit="mm2")'
     [
         (f"if False:\n    {OTHER_LINE}", Severity.OBSERVATION, "in a branch that never runs"),
         (f"if not 1:\n    pass\nelif 0:\n    {OTHER_LINE}", Severity.OBSERVATION, "never runs"),
-        (f"while 0:\n    {OTHER_LINE}", Severity.OBSERVATION, "never runs"),
+        (f"while 0:\n    {OTHER_LINE}", Severity.OBSERVATION, "in a loop that never runs"),
+        (f"for i in []:\n    {OTHER_LINE}", Severity.OBSERVATION, "in a loop that never runs"),
+        (f"for i in range(0):\n    {OTHER_LINE}", Severity.OBSERVATION, "a loop that never runs"),
+        (f"for i in range(2):\n    {OTHER_LINE}", Severity.MAJOR, "in a loop that was not run"),
+        (f"for i in ():\n    if deep:\n        {OTHER_LINE}", Severity.OBSERVATION, "a loop that"),
         (f"if True:\n    pass\nelse:\n    for i in n:\n        {OTHER_LINE}",
          Severity.OBSERVATION, "never runs"),
         (f"if deep:\n    {OTHER_LINE}", Severity.MINOR, "in a branch that was not run, or was"),

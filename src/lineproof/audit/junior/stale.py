@@ -37,6 +37,9 @@ _WHEN = {
         Severity.OBSERVATION, ": it stands in a branch that never runs",
         "take it out, or let it run",
     ),
+    When.IDLE: (
+        Severity.OBSERVATION, ": it stands in a loop that never runs", "take it out, or let it run",
+    ),
 }  # fmt: skip
 """What a line that the record does not hold means, by when its code is run."""
 INPUTS = {
