@@ -147,6 +147,14 @@ def part_run_again(notebook: Notebook) -> None:
     outputs(notebook, FLEXURE)[0]["metadata"][METADATA]["part"] = "0" * 16
 
 
+def output_edited(notebook: Notebook) -> None:
+    """A number of what is shown, typed over in the file: the record still has the old one."""
+    data = outputs(notebook, FLEXURE)[0]["data"]
+    text = "".join(data["text/html"])
+    assert "2500" in text
+    data["text/html"] = text.replace("2500", "2900")
+
+
 def half_a_character(notebook: Notebook) -> None:
     notebook["cells"][2]["source"] += "\nx = '\ud800'"
 
@@ -183,6 +191,10 @@ def run_out_of_order(notebook: Notebook) -> None:
         (input_run_again, "was run again after what stands below it"),
         (cell_put_in, "cell 4 (f_y = 1) has not been run"),
         (part_run_again, "shows part 'flexure' otherwise than the record holds it"),
+        (
+            output_edited,
+            "shows part 'flexure' otherwise than it was run: its output was changed by",
+        ),
         (half_a_character, "cell 3 is damaged"),
         (damaged_metadata, "is damaged; open the notebook in JupyterLab"),
         (damaged_attachments, "cell 1 is damaged"),
@@ -209,6 +221,16 @@ def test_a_part_run_again_without_change_is_not_stale(beam: Notebook) -> None:
     beam["cells"][GIVENS]["execution_count"] = 6
     source = "".join(beam["cells"][GIVENS]["source"])
     outputs(beam, GIVENS)[0]["metadata"][METADATA]["cells"] += ["c" * 12, cell_hash(source)]
+    assert read(beam).record.calc_id == "B1"
+
+
+def test_an_output_stored_in_lines_is_the_same_output(beam: Notebook) -> None:
+    """JupyterLab stores texts line by line; older notebooks hold no hash of what is shown."""
+    data = outputs(beam, FLEXURE)[0]["data"]
+    data["text/html"] = "".join(data["text/html"]).splitlines(keepends=True)
+    assert read(beam).record.calc_id == "B1"
+    output_edited(beam)
+    del outputs(beam, FLEXURE)[0]["metadata"][METADATA]["shown"]
     assert read(beam).record.calc_id == "B1"
 
 

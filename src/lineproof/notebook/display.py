@@ -70,12 +70,13 @@ def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:
     """Return the MIME bundle of a part and its metadata.
 
     ``ran`` holds the hashes of the cells run so far, by their counts. They stand in the metadata
-    with the part's digest, so that a reader can tell outputs that are older than their cells.
+    with the part's digest, so that a reader can tell outputs that are older than their cells, and
+    with a hash of what is shown, by which one changed by hand gives itself away.
     """
     record, labels = view.record()
     part = record["part"]
     data = part_bundle(record, part, labels)
-    note = {"part": part_digest(part), "cells": ran or []}
+    note = {"part": part_digest(part), "shown": shown_hash(data), "cells": ran or []}
     return data, {METADATA: note}
 
 
@@ -98,6 +99,12 @@ def part_bundle(
 def part_digest(part: Mapping[str, Any]) -> str:
     """Hash what a part was made from; no computed number enters."""
     return digest_of(*[f"{entry['id']}:{entry['digest']}" for entry in part["entries"]])
+
+
+def shown_hash(data: Mapping[str, Any]) -> str:
+    """Hash what a part looks like under its cell, whether its texts stand whole or in lines."""
+    texts = (data.get(kind, "") for kind in ("text/html", "text/plain"))
+    return digest_of(*("".join(map(str, t)) if isinstance(t, list) else str(t) for t in texts))
 
 
 def cell_hash(source: str) -> str:

@@ -9,7 +9,7 @@ from typing import Any
 
 from lineproof.errors import FaultList, UserError
 from lineproof.notebook.cells import LEFT_OUT, PARAMETERS, Cell, cells_of, data_of, load_notebook
-from lineproof.notebook.display import ANCHOR, METADATA, cell_hash, part_digest
+from lineproof.notebook.display import ANCHOR, METADATA, cell_hash, part_digest, shown_hash
 from lineproof.record import MIME, Record
 
 RUN_ALL = "run all cells, then save"
@@ -155,7 +155,7 @@ def _check_fresh(
     name: str,
     faults: FaultList,
 ) -> None:
-    for sentence in stale_cells(cells):
+    for sentence in (*stale_cells(cells), *altered_outputs(cells)):
         faults.add(f"{name}: {sentence}; {RUN_ALL}")
     for key, anchor in anchors.items():
         made_from = anchor.note.get("part")
@@ -178,6 +178,25 @@ def stale_cells(cells: tuple[Cell, ...]) -> list[str]:
         later = [ran for number, ran in history.items() if number >= cell.number]
         if cell.kind == "code" and cell.source.strip() and later:
             said += _stale(cell, later, shows_part=any(data_of(cell, ANCHOR)))
+    return said
+
+
+def altered_outputs(cells: tuple[Cell, ...]) -> list[str]:
+    """Say which parts are shown otherwise than when they were run: changed by hand since.
+
+    Outputs of before the hash was kept say nothing of it.
+    """
+    said = []
+    for cell in cells:
+        for output, data in data_of(cell, ANCHOR):
+            note = output.get("metadata", {}).get(METADATA)
+            kept = note.get("shown") if isinstance(note, Mapping) else None
+            if kept and kept != shown_hash(output["data"]):
+                key = data.get("part") if isinstance(data, Mapping) else ""
+                said.append(
+                    f"{cell.name} shows part {key!r} otherwise than it was run: its output was "
+                    "changed by hand"
+                )
     return said
 
 
