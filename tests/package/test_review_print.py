@@ -122,10 +122,12 @@ def test_ticks_alone_stand_in_the_table_not_beside_every_line(calc: Record) -> N
 
 
 def changed(calc: Record) -> Record:
-    """The same calc with another typed depth: by digest, as if it had been run again."""
+    """The same calc with a depth of 650 mm typed: by digest, as if it had been run again."""
     data = copy.deepcopy(calc.data)
     for part in data["parts"]:
         for entry in part["entries"]:
+            if entry["id"] == "inputs/h":
+                entry["typed"] = "650 mm"
             if entry["id"] in ("inputs/h", "section/d", "flexure/M_r", "flexure/moment"):
                 entry["digest"] = "0" * 16
     return Record(data | {"digest": "1" * 16})
@@ -139,7 +141,7 @@ def test_stale_marks_are_listed_under_what_has_changed(calc: Record) -> None:
     now = changed(calc)
     text = words_of(to_html(build_package([now], reviews=[printed_review(review, now)])))
     assert "Marked before a change" in text
-    assert "Overall depth (1.4): changed.3 marks by KM1.4, 4.6, 5.5" in text
+    assert "Overall depth (1.4) was 24.4 in, is 650 mm.3 marks by KM1.4, 4.6, 5.5" in text
     assert "3 marked before a change" in text
 
 
