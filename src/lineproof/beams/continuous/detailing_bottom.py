@@ -181,7 +181,7 @@ def _anchored(designed: Designed, span: int, near: End, groups: Sequence[BarRun]
     if not designed.exterior(support):
         return next(
             (
-                Anchored(n) for n in numbers
+                Anchored(n) for n in numbers[:-1]
                 if _share(designed, support, groups, n)
                 and _held_at_zero(designed, span, near, groups[: n + 1])
             ),
