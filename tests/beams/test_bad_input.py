@@ -220,8 +220,8 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
         # 16.6816 x 380 x 566.1**2/2 = 1015.7 kN.m
         {**RECTANGULAR, "superimposed": "40 kPa", "bottom_bars": "4-25M"},
         (
-            "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1426.4 kN.m; "
-            "write a deeper or wider beam"
+            "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1426.4 kN.m, "
+            "which no bars hold; write a deeper or wider beam, stronger concrete or less load"
         ),
     ),
 }

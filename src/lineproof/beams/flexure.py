@@ -106,7 +106,8 @@ def _refuse_overload(steps: Steps, shape: Shape) -> None:
     if M_f >= most:
         raise UserError(
             f"h: the concrete balances at most {most / 1e6:.1f} kN.m, but the factored moment is "
-            f"{M_f / 1e6:.1f} kN.m; write a deeper or wider beam"
+            f"{M_f / 1e6:.1f} kN.m, which no bars hold; write a deeper or wider beam, stronger "
+            "concrete or less load"
         )
 
 

@@ -25,7 +25,7 @@ from lineproof.beams.continuous.resistance import (
     stand,
 )
 from lineproof.beams.continuous.resistance_cover import covered
-from lineproof.beams.continuous.resistance_demand import demand_at, end_tension, largest
+from lineproof.beams.continuous.resistance_demand import Side, demand_at, end_tension, largest
 
 from .laid import beam_of
 
@@ -213,3 +213,11 @@ def test_lapped_bars_never_count_more_than_one_where_the_overlap_is_longer_than_
     parts = sum(bars.developed(x) for bars in standing)
     assert parts == pytest.approx(np.ones(21))
     assert standing[0].developed(np.array([3500.0])) == pytest.approx(0.5)
+
+
+def test_no_place_is_sought_beside_a_station_where_no_bars_would_do() -> None:
+    """The tension passes its cap of 2 halfway between 1 at x = 2 and 3 at x = 3; not at infinity."""
+    none = np.zeros(4, dtype=np.intp)
+    side = Side(np.ones(4), none, np.array([1.0, np.inf, 1.0, 3.0]), none, np.full(4, 2.0))
+    with np.errstate(all="raise"):
+        assert side.crossings(np.arange(4.0)) == [2.5]

@@ -57,9 +57,14 @@ class Side:
         return self.F if self.torsion is None else np.maximum(self.F, self.torsion)
 
     def crossings(self, x: Floats) -> list[float]:
-        """Return the places between the stations x at which the tension reaches its cap."""
+        """Return the places between the stations x at which the tension reaches its cap.
+
+        Where no bars would do the tension is infinite: between such a station and the next one
+        there is no place to give.
+        """
         over = self.free - self.cap
-        at = np.flatnonzero(over[:-1] * over[1:] < 0)
+        finite, above = np.isfinite(over), np.sign(over)
+        at = np.flatnonzero((above[:-1] * above[1:] < 0) & finite[:-1] & finite[1:])
         part = over[at] / (over[at] - over[at + 1])
         found: list[float] = (x[at] + part * (x[at + 1] - x[at])).tolist()
         return found
