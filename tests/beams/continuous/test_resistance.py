@@ -216,7 +216,7 @@ def test_lapped_bars_never_count_more_than_one_where_the_overlap_is_longer_than_
 
 
 def test_no_place_is_sought_beside_a_station_where_no_bars_would_do() -> None:
-    """The tension passes its cap of 2 halfway between 1 at x = 2 and 3 at x = 3; not at infinity."""
+    """The tension passes its cap of 2 halfway between 1 at x = 2 and 3 at x = 3, not before."""
     none = np.zeros(4, dtype=np.intp)
     side = Side(np.ones(4), none, np.array([1.0, np.inf, 1.0, 3.0]), none, np.full(4, 2.0))
     with np.errstate(all="raise"):
