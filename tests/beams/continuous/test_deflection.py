@@ -188,16 +188,27 @@ def test_a_span_above_its_level_is_limited_upward_without_live_load_beside() -> 
     assert service.stages["rise"] == service.stages["dead"]
 
 
-def test_rise_with_parts_attached_goes_on_by_creep() -> None:
-    """Above its level under sustained load: (3.0 - 2.0)*2 mm more than the live load alone."""
+def lifted(
+    dead: float, sustained: float
+) -> tuple[float, numbers.SpanSection, dict[Stage, StageMoments]]:
+    """Return the deflection [mm] of 10 kN.m, an uncracked section, moments that lift it [N.mm].
+
+    The largest rise is that of 40 kN.m.
+    """
     section = replace(BASE, f_r=1e6)
     at = numbers.deflections(section, simple(10e6), carries=FLOOR).stages["all"].delta
-    moments = {
-        "dead": StageMoments(-10e6, 0, 0), "sustained": StageMoments(-20e6, 0, 0),
+    moments: dict[Stage, StageMoments] = {
+        "dead": StageMoments(dead, 0, 0), "sustained": StageMoments(sustained, 0, 0),
         "all": StageMoments(0, 0, 0), "rise": StageMoments(-40e6, 0, 0),
     }  # fmt: skip
-    floor = numbers.deflections(section, moments, carries=FLOOR)  # type: ignore[arg-type]
-    attached = numbers.deflections(section, moments, carries=PARTITIONS)  # type: ignore[arg-type]
+    return at, section, moments
+
+
+def test_rise_with_parts_attached_goes_on_by_creep() -> None:
+    """Above its level under sustained load: (3.0 - 2.0)*2 mm more than the live load alone."""
+    at, section, moments = lifted(-10e6, -20e6)
+    floor = numbers.deflections(section, moments, carries=FLOOR)
+    attached = numbers.deflections(section, moments, carries=PARTITIONS)
 
     assert floor.rise == pytest.approx(3 * at)
     assert attached.rise == pytest.approx(3 * at + 2 * at)
@@ -209,13 +220,8 @@ def test_sustained_load_that_holds_a_place_down_need_not_be_there() -> None:
 
     Without that load dead load creeps: 4 - 2 at once, (3.0 - 2.0)*2 by creep, not (3.0 - 2.0)*1.
     """
-    section = replace(BASE, f_r=1e6)
-    at = numbers.deflections(section, simple(10e6), carries=FLOOR).stages["all"].delta
-    moments = {
-        "dead": StageMoments(-20e6, 0, 0), "sustained": StageMoments(-10e6, 0, 0),
-        "all": StageMoments(0, 0, 0), "rise": StageMoments(-40e6, 0, 0),
-    }  # fmt: skip
-    attached = numbers.deflections(section, moments, carries=PARTITIONS)  # type: ignore[arg-type]
+    at, section, moments = lifted(-20e6, -10e6)
+    attached = numbers.deflections(section, moments, carries=PARTITIONS)
 
     assert attached.rise == pytest.approx(2 * at + 2 * at)
 
