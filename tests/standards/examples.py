@@ -62,6 +62,11 @@ EXAMPLES: dict[str, tuple[Given, Given]] = {
         {"A_so": 212.8, "n_o": 2, "A_b": 200},
         {"A_so": 212.8, "n_o": 1, "A_b": 200},
     ),
+    # 0.6*400*(63.9*11183)**(1/3) = 240*89.40 = 21 456; with 500 MPa 26 820
+    "crack_control.ALLOWANCE_DOES": (
+        {"f_y": 400, "d_c": 63.9, "A_e": 11183, "z_max": 25000},
+        {"f_y": 500, "d_c": 63.9, "A_e": 11183, "z_max": 25000},
+    ),
     "crack_control.CRACKS": ({"z": 21456, "z_max": 25000}, {"z": 25100, "z_max": 25000}),
     "crack_control.NEEDS_SKIN": ({"h": 751}, {"h": 750}),
     # 2*3*100 = 600; 2*2*100 = 400

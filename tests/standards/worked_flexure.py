@@ -209,6 +209,11 @@ MINIMUM = (
     W("minimum.SPREAD_AREA", {"b_ot": 380, "h_f": 140}, "0.004*380*140 = 212.8"),
 )
 CRACKS = (
+    W(
+        "crack_control.STRESS",
+        {"n_E": 8, "M_s": 120, "d": 540, "kd": 140, "I_cr": 1.6e9},
+        "8*120e6*400/1.6e9 = 240",
+    ),
     W("crack_control.STRESS_ALLOWANCE", {"f_y": 400}, "0.6*400 = 240", CHECK_7),
     W(
         "crack_control.D_C",

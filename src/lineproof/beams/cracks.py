@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
 
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.flexure import midspan
@@ -11,7 +12,7 @@ from lineproof.beams.steps import Steps
 from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars
+from lineproof.standards.a23_3 import bars, deflection
 from lineproof.standards.a23_3 import crack_control as clause
 
 CRACKS = "crack-control"
@@ -31,16 +32,47 @@ def exposure_kind(exposure: str) -> str:
     return "interior" if exposure == "N" else "exterior"
 
 
+Stress = Callable[[Steps], None]
+"""Records, inside the open part, the stress of the bars under specified loads and binds f_s."""
+
+
 def cracks_inside(
-    steps: Steps, exposure: str, layers: BarLayers, area: Formula = clause.TENSION_AREA
+    steps: Steps,
+    exposure: str,
+    layers: BarLayers,
+    area: Formula = clause.TENSION_AREA,
+    stress: Stress | None = None,
 ) -> None:
-    """Record z inside the open part, with the concrete in tension by ``area``."""
+    """Record z inside the open part, with the concrete in tension by ``area``.
+
+    Where the allowance for the stress of the bars does not do, ``stress`` calculates it.
+    """
     largest = max(layers, key=lambda layer: layer.diameter)
     if largest is not layers[0]:
         steps.bind(A_b=_area_of(steps.sheet, largest.size))
-    steps.lines(clause.STRESS_ALLOWANCE, clause.D_C, clause.D_S, clause.BAR_COUNT, area, clause.Z)
-    steps.sheet.lookup("z_max", clause.LIMITS, exposure_kind(exposure))
+    steps.lines(clause.D_C, clause.D_S, clause.BAR_COUNT, area)
+    steps.bind(z_max=steps.sheet.lookup("z_max", clause.LIMITS, exposure_kind(exposure)))
+    if stress is None or steps.holds(clause.ALLOWANCE_DOES):
+        steps.line(clause.STRESS_ALLOWANCE)
+    else:
+        steps.decide(clause.ALLOWANCE_DOES)
+        stress(steps)
+    steps.line(clause.Z)
     steps.check(clause.CRACKS)
+
+
+def stress_inside(steps: Steps, A_s: Entry) -> None:
+    """Record inside the open part the stress of the bars ``A_s`` in tension due to M_s."""
+    steps.line(deflection.MODULAR_RATIO)
+    steps.line(deflection.AXIS, A_s=A_s)
+    flanged = "h_f" in steps.place and steps.entry("b").value > steps.entry("b_w").value
+    if flanged and not steps.decide(deflection.AXIS_IN_FLANGE):
+        kd_w = steps.line(deflection.AXIS_IN_WEB, A_s=A_s)
+        steps.line(deflection.CRACKED_TEE, A_s=A_s)
+        steps.line(clause.STRESS, kd=kd_w)
+        return
+    steps.line(deflection.CRACKED, A_s=A_s)
+    steps.line(clause.STRESS)
 
 
 def _area_of(sheet: Sheet, size: str) -> Entry:

@@ -8,7 +8,6 @@ The beam is that of ``two_sizes``: h 600, b_w 350, cover 30 to stirrups 10M (11.
 from __future__ import annotations
 
 import math
-from typing import Any
 
 import pytest
 
@@ -277,21 +276,25 @@ def test_straight_top_bars_at_an_end_are_as_long_as_those_that_end_first() -> No
         assert "development" not in entries
 
 
-def test_smaller_bars_are_no_cure_of_cracks_where_they_do_not_do() -> None:
+def test_all_bars_share_cracks_and_those_developed_are_stretched() -> None:
     """At support 1 2-25M, 1-15M and 1-20M stand, 1500 mm2, of which 1368 count: d = 557.05 mm.
 
     A crack meets all of them: n_z = 1500/500 = 3, A_e = 2*62.95*760/3 = 31 900 mm2, d_c = 63.9 mm,
-    z = 240*(63.9*31900)**(1/3) = 30 430 N/mm. 20M of that area: n_z = 5, A_e = 19 140 mm2,
-    d_c = 61.05 mm: z = 240*(61.05*19140)**(1/3) = 25 280 > 25 000. Of 15M, 8 would stand in the
-    web (3*500/200), 232.4/7 - 16 = 17.2 mm apart, at least 30.
+    0.6 f_y (d_c A_e)^(1/3) = 240*126.8 = 30 430 > 25 000 N/mm. So the stress is calculated:
+    n_E = 200 000/25 456 = 7.857, n A_s/b = 28.28,
+    kd = 28.28*(sqrt(1 + 2*557.05/28.28) - 1) = 151.5 mm,
+    I_cr = 380*151.5**3/3 + 7.857*1368*405.6**2 = 2.208e9 mm4, f_s = n_E M_s 405.6/I_cr.
     """
     hooked = row("top", "2-25M", *EDGE_ENDS, hook_start="90", hook_end="90")
     bottom = [row("bottom", "2-25M", *EDGE_ENDS), row("bottom", "2-15M", *EDGE_ENDS)]
     runs = [*bottom, hooked, row("top", "1-15M", *EDGE_ENDS), *OVERHANG]
     entries = edge(runs, FLEXURE).entries_of("hog-1-right")
-    assert entries["z"].value == pytest.approx(30_430, abs=5)
-    cure: Any = entries["cure-crack-control"]
-    assert cure.source.text == "No smaller bars of the same area would do alone."
+    left, right = entries["stress-allowance"].value
+    assert (left, right) == (pytest.approx(30_430, abs=5), 25_000)
+    M_s = entries["M_s"].value
+    assert entries["f_s"].value == pytest.approx(7.857 * M_s * 405.57 / 2.2082e9, rel=2e-4)
+    z = entries["f_s"].value * (63.9 * 31_896) ** (1 / 3)
+    assert entries["z"].value == pytest.approx(z, rel=1e-4)
 
 
 def test_the_section_is_drawn_as_deep_as_it_is_calculated() -> None:

@@ -157,8 +157,9 @@ def _each_its_own(
 def _stopped_and_cure(section: Section, stopped: Sequence[Stopped]) -> str:
     """Say what stops the bars that come nearest, and what would let some pass.
 
-    The stress of the crack control is a part of the yield stress: neither depth nor concrete moves
-    it. Where no bars fit at all, width alone makes room.
+    Concrete does not move the stress of the crack control, and where that is a part of the yield
+    stress, as no moment under specified loads is known, nor does depth. Where no bars fit at all,
+    width alone makes room.
     """
     anchored = [each for each in stopped if ANCHORAGE in each.fails]
     near = min(anchored or stopped, key=lambda each: each.nearest)
@@ -166,7 +167,9 @@ def _stopped_and_cure(section: Section, stopped: Sequence[Stopped]) -> str:
     said = ", ".join(_said(key) for key in keys)
     support = "a wider support, " if anchored else ""
     beam = "a deeper or wider beam, or stronger concrete"
-    if _CRACKS.issuperset(keys):
+    if _CRACKS.issuperset(keys) and "M_s" in section.numbers[0]:
+        beam = "a deeper or wider beam"
+    elif _CRACKS.issuperset(keys):
         lower = section.numbers[0]["f_y"] > _LOWER_GRADES
         beam = "a wider beam" + (", or grade = '400R' or '400W'" if lower else "")
     elif _ROOM & near.fails.keys():

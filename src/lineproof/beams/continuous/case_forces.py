@@ -25,6 +25,26 @@ _ROUNDED, _LEAST = 1e-4, 1e6
 
 
 @dataclass(frozen=True, slots=True)
+class Names:
+    """Symbols of a case on a span: load, moments at the near and far axis, shear, place, moment.
+
+    ``V`` is the shear at the section, "" where none is asked for.
+    """
+
+    w: str
+    near: str
+    far: str
+    shear: str
+    x: str
+    M: str
+    V: str = ""
+
+
+FACTORED = Names("w_f", "M_sn", "M_sf", "V_sn", "x_f", "M_f", "V_f")
+SPECIFIED = Names("w_s", "M_qn", "M_qf", "V_qn", "x_q", "M_s")
+
+
+@dataclass(frozen=True, slots=True)
 class CaseOnSpan:
     """A load case on one span: factors by load type where they act, and by group everywhere."""
 
@@ -57,20 +77,36 @@ def record_forces(
     if model.imported is not None:
         record_imported(steps, model, demand, near, x=x)
         return
+    _record(steps, model, demand, near, x=x, names=FACTORED)
+
+
+def record_specified_moment(
+    steps: Steps, model: Model, demand: Demand, near: End, *, x: Entry | None = None
+) -> None:
+    """Record inside the open part M_s of a case of specified loads, and bind it.
+
+    ``model`` is that under specified loads. ``x`` as for factored loads.
+    """
+    _record(steps, model, demand, near, x=x, names=SPECIFIED)
+
+
+def _record(
+    steps: Steps, model: Model, demand: Demand, near: End, *, x: Entry | None, names: Names
+) -> None:
     case = case_on_span(model, demand, near)
-    lines = _Lines(steps, model, demand, case)
+    lines = _Lines(steps, model, demand, case, names)
     lines.record_ends()
     if x is None:
         x = lines.record_zero_shear()
-    steps.bind(x_f=x)
+    steps.bind(**{names.x: x})
     lines.record_section(x)
-    _stop_unless_same(steps, demand)
+    _stop_unless_same(steps, demand, names)
 
 
-def _stop_unless_same(steps: Steps, demand: Demand) -> None:
+def _stop_unless_same(steps: Steps, demand: Demand, names: Names) -> None:
     """Stop where the lines give another moment or shear than that of the demand they stand for."""
-    for symbol, size in (("M_f", abs(demand.M)), ("V_f", abs(demand.V))):
-        if abs(steps.entry(symbol).value - size) > _ROUNDED * max(size, _LEAST):
+    for symbol, size in ((names.M, abs(demand.M)), (names.V, abs(demand.V))):
+        if symbol and abs(steps.entry(symbol).value - size) > _ROUNDED * max(size, _LEAST):
             msg = f"{demand}: {symbol} is recorded as {steps.entry(symbol).value!r}"
             raise AssertionError(msg)
 
@@ -84,7 +120,10 @@ def factor_text(factor: float) -> str:
 class _Lines:
     """The lines of one case on one span."""
 
-    def __init__(self, steps: Steps, model: Model, demand: Demand, case: CaseOnSpan) -> None:
+    def __init__(
+        self, steps: Steps, model: Model, demand: Demand, case: CaseOnSpan, of: Names
+    ) -> None:
+        self.of = of
         self.steps, self.model, self.demand, self.case = steps, model, demand, case
         self.title = str(demand.case)
         self.loads = [
@@ -97,14 +136,18 @@ class _Lines:
             self.names |= load.entries
 
     @property
+    def _own(self) -> tuple[str, ...]:
+        """Symbols of lines of this case that its other lines rest on."""
+        of = self.of
+        return of.x, of.w, of.near, of.far, of.shear
+
+    @property
     def hangs(self) -> bool:
         """Whether the span is a cantilever."""
         return self.model.forces.beam.cantilever(self.case.span)
 
     def _line(self, text: str, title: str) -> Entry:
-        scope = self.names | {
-            n: e for n, e in self.steps.place.items() if n in ("x_f", "w_f", "M_sn", "M_sf", "V_sn")
-        }
+        scope = self.names | {n: e for n, e in self.steps.place.items() if n in self._own}
         made = self.steps.sheet.line(stated(text), title=title, **named(scope, text))
         self.steps.place[made.symbol] = made
         return made
@@ -120,11 +163,9 @@ class _Lines:
                 terms.append(f"{factor_text(factor)}*{name}")
         self.uniform = bool(terms)
         if terms:
-            self._line(f"w_f = {' + '.join(terms)}", f"Load on span {span}: {self.title}")
-        self.moments = {
-            "M_sn": self._moment("M_sn", near),
-            "M_sf": self._moment("M_sf", other(near)),
-        }
+            self._line(f"{self.of.w} = {' + '.join(terms)}", f"Load on span {span}: {self.title}")
+        self.near_moment = self._moment(self.of.near, near)
+        self.far_moment = self._moment(self.of.far, other(near))
         self._record_shear()
 
     def _moment(self, symbol: str, end: End) -> bool:
@@ -169,7 +210,8 @@ class _Lines:
 
     def _record_shear(self) -> None:
         support = self.case.span if self.case.near == "left" else self.case.span + 1
-        terms = (["w_f*l"] if self.hangs else ["w_f*l/2"]) if self.uniform else []
+        of, near, far = self.of, self.near_moment, self.far_moment
+        terms = ([f"{of.w}*l"] if self.hangs else [f"{of.w}*l/2"]) if self.uniform else []
         for factor, load in self.loads:
             n = load.number
             if load.at is not None:
@@ -179,11 +221,11 @@ class _Lines:
                 s, e = self._ends(load)
                 share = "" if self.hangs else f"*(l - ({s} + {e})/2)/l"
                 terms.append(f"{factor}*w_x{n}*({e} - {s}){share}")
-        near, far = self.moments["M_sn"], self.moments["M_sf"]
         if not self.hangs and (near or far):
-            terms.append("(M_sf - M_sn)/l" if near and far else "M_sf/l" if far else "-M_sn/l")
-        text = " + ".join(terms).replace("+ -", "- ") or "0*w_f*l"
-        self._line(f"V_sn = {text}", f"Shear at the axis of support {support}, this case")
+            both = f"({of.far} - {of.near})/l"
+            terms.append(both if near and far else f"{of.far}/l" if far else f"-{of.near}/l")
+        text = " + ".join(terms).replace("+ -", "- ") or f"0*{of.w}*l"
+        self._line(f"{of.shear} = {text}", f"Shear at the axis of support {support}, this case")
 
     def _passed(self, x: float) -> list[tuple[str, SingleLoad, bool]]:
         """Return the single loads between the near axis and x; True: x stands within the load."""
@@ -208,10 +250,9 @@ class _Lines:
         under = [load for _, load in self.loads
                  if load.at is not None and abs(self._place(load)[0] - at) <= NEAR]  # fmt: skip
         if under:
-            return self._line(
-                f"x_f = {self._at(under[0])}", "The largest moment stands under the point load"
-            )
-        above, below = ["V_sn"], ["w_f"] if self.uniform else []
+            title = "The largest moment stands under the point load"
+            return self._line(f"{self.of.x} = {self._at(under[0])}", title)
+        above, below = [self.of.shear], [self.of.w] if self.uniform else []
         for factor, load, within in self._passed(at):
             n = load.number
             if load.at is not None:
@@ -226,35 +267,40 @@ class _Lines:
         top, bottom = " ".join(above), " + ".join(below)
         top = f"({top})" if len(above) > 1 else top
         bottom = f"({bottom})" if len(below) > 1 else bottom
-        return self._line(f"x_f = {top}/{bottom}", "Where the shear is zero, from the near axis")
+        title = "Where the shear is zero, from the near axis"
+        return self._line(f"{self.of.x} = {top}/{bottom}", title)
 
     def record_section(self, x: Entry) -> None:
         """Record M_f and V_f at the section."""
         moment, shear = self._section_terms(x.value)
+        of = self.of
         V = self.demand.V if self.case.near == "left" else -self.demand.V
         top = self.demand.M < 0
         kind = "Negative" if top else "Positive"
         text = signed(moment, negative=top)
-        self._line(f"M_f = {text}", f"{kind} moment at the section: {self.title}")
-        self._line(f"V_f = {signed(shear, negative=V < 0)}", f"Shear at the section: {self.title}")
+        self._line(f"{of.M} = {text}", f"{kind} moment at the section: {self.title}")
+        if of.V:
+            text = signed(shear, negative=V < 0)
+            self._line(f"{of.V} = {text}", f"Shear at the section: {self.title}")
 
     def _section_terms(self, x: float) -> tuple[str, str]:
-        moment = ["M_sn + V_sn*x_f" if self.moments["M_sn"] else "V_sn*x_f"]
-        shear = ["V_sn"]
+        of, at = self.of, self.of.x
+        moment = [f"{of.near} + {of.shear}*{at}" if self.near_moment else f"{of.shear}*{at}"]
+        shear = [of.shear]
         if self.uniform:
-            moment.append("- w_f*x_f**2/2")
-            shear.append("- w_f*x_f")
+            moment.append(f"- {of.w}*{at}**2/2")
+            shear.append(f"- {of.w}*{at}")
         for factor, load, within in self._passed(x):
             n = load.number
             if load.at is not None:
-                moment.append(f"- {factor}*P_x{n}*(x_f - {self._at(load)})")
+                moment.append(f"- {factor}*P_x{n}*({at} - {self._at(load)})")
                 shear.append(f"- {factor}*P_x{n}")
                 continue
             s, e = self._ends(load)
             if within:
-                moment.append(f"- {factor}*w_x{n}*(x_f - {s})**2/2")
-                shear.append(f"- {factor}*w_x{n}*(x_f - {s})")
+                moment.append(f"- {factor}*w_x{n}*({at} - {s})**2/2")
+                shear.append(f"- {factor}*w_x{n}*({at} - {s})")
             else:
-                moment.append(f"- {factor}*w_x{n}*({e} - {s})*(x_f - ({s} + {e})/2)")
+                moment.append(f"- {factor}*w_x{n}*({e} - {s})*({at} - ({s} + {e})/2)")
                 shear.append(f"- {factor}*w_x{n}*({e} - {s})")
         return " ".join(moment), " ".join(shear)

@@ -15,9 +15,12 @@ from lineproof.beams.continuous.cures import part_used
 from lineproof.record import Entry
 from lineproof.record.entry import CRITERIA, DECISION, FOUND, LINE
 from lineproof.record.procedures import run
+from lineproof.standards.a23_3 import crack_control
 
-FORCES = frozenset(("M_f", "V_f", "T_f", "R_f", "v_f"))
+FORCES = frozenset(("M_f", "M_s", "V_f", "T_f", "R_f", "v_f"))
 """Values that stay as they are, whatever is changed."""
+_EITHER_WAY = frozenset({crack_control.ALLOWANCE_DOES.key})
+"""Decisions that may fall as they will: what is calculated holds where less would do as well."""
 
 
 class AnotherCaseError(ValueError):
@@ -148,7 +151,7 @@ def _decisions(touched: Iterable[Entry], check: Entry) -> Iterable[Entry]:
         for each in entry.part.entries.values():
             if each is entry:
                 break
-            if each.kind == DECISION:
+            if each.kind == DECISION and each.source.key not in _EITHER_WAY:
                 yield each
 
 

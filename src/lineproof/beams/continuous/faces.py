@@ -4,9 +4,12 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from lineproof.beams.continuous.forces import ENDS, End, other
-from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.case_forces import NEAR
+from lineproof.beams.continuous.forces import ENDS, Demand, End, other
+from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.restraint import held_in_frame, restraint_moment
+from lineproof.record import Entry
+from lineproof.standards.a23_3 import analysis
 
 
 @dataclass(frozen=True, slots=True)
@@ -91,3 +94,22 @@ def hogging(model: Model, face: Face) -> float:
     if nominally_simple(model, face):
         return restraint_moment(model, face.support, face.span)
     return -model.forces.hog(face.support, face.side).M
+
+
+def nearer(model: Model, demand: Demand) -> End:
+    """Return the end of its span that a demand stands nearer to."""
+    half = model.lengths[demand.span - 1].value / 2
+    return "left" if demand.x <= half * (1 + 1e-9) else "right"
+
+
+def at_face(model: Model, demand: Demand, near: End, symbol: str = "") -> Entry | None:
+    """Record the distance of the near face, if the largest moment of the span stands there.
+
+    Beside a span that is loaded far more, the shear is nowhere zero between the faces.
+    """
+    start, end = model.forces.beam.faces(demand.span)
+    if model.imported is not None or abs(demand.x - (start if near == "left" else end)) > NEAR:
+        return None
+    support = demand.span if near == "left" else demand.span + 1
+    b_sn = model.sheet.entry(f"{GIVEN}/b_s{support}")
+    return model.sheet.line(analysis.TO_FACE, symbol=symbol, b_sn=b_sn)

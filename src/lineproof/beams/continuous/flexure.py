@@ -12,7 +12,8 @@ from lineproof.beams.bottom_bars import (
     record_fit_above,
     record_fit_overhang,
 )
-from lineproof.beams.continuous.case_forces import NEAR, record_forces
+from lineproof.beams.continuous.case_forces import record_forces
+from lineproof.beams.continuous.crack_stress import face_stress, sag_stress
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
@@ -25,9 +26,11 @@ from lineproof.beams.continuous.developed import (
 )
 from lineproof.beams.continuous.faces import (
     Face,
+    at_face,
     faces_of,
     has_sag,
     hogging,
+    nearer,
     nominally_simple,
 )
 from lineproof.beams.continuous.flexure_gaps import (
@@ -38,7 +41,6 @@ from lineproof.beams.continuous.flexure_gaps import (
     record_depth_assumed,
     record_depth_beside,
 )
-from lineproof.beams.continuous.forces import Demand, End
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.inputs import ContinuousInputs
 from lineproof.beams.continuous.model import GIVEN, Model
@@ -59,6 +61,8 @@ from lineproof.standards.references import MECHANICS
 
 _SHARED = ("M_r", "A_s", "d", "n_o", "A_b", "d_b", "d_bs")
 """What both faces of a support share where their section is the same."""
+COUNTED = "A_s counted"
+"""Names, beside these, the area that resists; ``A_s`` is that of all bars, which share cracks."""
 _SAME = 1e-9
 NO_MOMENT = "no-moment"
 """Key of the note that no load case brings tension to a face of the beam."""
@@ -111,8 +115,9 @@ def record_sag(design: Design, span: int) -> None:
             minimum_of(
                 steps, inputs.minimum_rule, minimum.BY_CRACKING, minimum.WIDTH_WEB, waivable=True
             )
+            stress = sag_stress(model, span, steps.entry("A_s"))
             count_standing(steps, key)
-            cracks_inside(steps, inputs.exposure, layers)
+            cracks_inside(steps, inputs.exposure, layers, stress=stress)
         if steps.decide(NEEDS_SKIN):
             side = design.side_bars(span, sag_at(design.designed, span))
             record_skin(steps, inputs.exposure, side)
@@ -205,24 +210,6 @@ def _take(steps: Steps, names: tuple[str, ...]) -> None:
     """Let symbols stand for what has just been recorded in the open part."""
     made = steps.sheet.part_entries
     steps.bind(**{name: made[name] for name in names if name in made})
-
-
-def nearer(model: Model, demand: Demand) -> End:
-    """Return the end of its span that a demand stands nearer to."""
-    half = model.lengths[demand.span - 1].value / 2
-    return "left" if demand.x <= half * (1 + 1e-9) else "right"
-
-
-def at_face(model: Model, demand: Demand, near: End) -> Entry | None:
-    """Record the distance of the near face, if the largest moment of the span stands there.
-
-    Beside a span that is loaded far more, the shear is nowhere zero between the faces.
-    """
-    start, end = model.forces.beam.faces(demand.span)
-    if model.imported is not None or abs(demand.x - (start if near == "left" else end)) > NEAR:
-        return None
-    support = demand.span if near == "left" else demand.span + 1
-    return model.sheet.line(analysis.TO_FACE, b_sn=model.sheet.entry(f"{GIVEN}/b_s{support}"))
 
 
 def record_hog(design: Design, support: int) -> None:
@@ -318,14 +305,17 @@ def _record_face(
     )  # fmt: skip
     if inputs.slab:
         _check_spread(steps, top)
+    counted = steps.entry("A_s")
     count_standing(steps, face.key)
-    cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape])
+    stress = face_stress(model, face, counted)
+    cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape], stress)
     if steps.holds(NEEDS_SKIN):
         x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
         record_skin(steps, inputs.exposure, design.side_bars(face.span, x))
     _take(steps, _SHARED)
-    made = dict(sheet.part_entries) | dict(counts) | {"A_s": steps.entry("A_s")}
-    return {name: made[name] for name in _SHARED if name in made}
+    made = dict(sheet.part_entries) | dict(counts)
+    shared = {name: made[name] for name in _SHARED if name in made}
+    return shared | {"A_s": steps.entry("A_s"), COUNTED: counted}
 
 
 def _record_redistribution(steps: Steps, model: Model, face: Face) -> None:
@@ -378,8 +368,11 @@ def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top
     """Record the moment of the milder face, its slab and its cracks, for the same bars."""
     steps = begin(model, face.span, "b_w")
     record_demand(steps, model, face)
-    steps.bind(**dict(worst))
+    steps.bind(**{name: entry for name, entry in worst.items() if name != COUNTED})
     steps.check(flexure.STRENGTH)
     if model.inputs.slab:
         _check_spread(steps, top)
-    cracks_inside(steps, model.inputs.exposure, top.groups, TENSION_AREAS[model.inputs.shape])
+    stress = face_stress(model, face, worst[COUNTED])
+    cracks_inside(
+        steps, model.inputs.exposure, top.groups, TENSION_AREAS[model.inputs.shape], stress
+    )

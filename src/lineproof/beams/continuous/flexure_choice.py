@@ -17,6 +17,7 @@ from lineproof.beams.continuous.bar_choice import (
     choose,
     top_trial,
 )
+from lineproof.beams.continuous.crack_stress import specified_hog, specified_sag
 from lineproof.beams.continuous.faces import (
     faces_of,
     hogging,
@@ -91,6 +92,7 @@ def choose_bottom(
     sections: dict[int, Section] = {}
     for span in sagging_spans(model):
         at = numbers_in(model, materials, span) | {"M_f": model.forces.sag(span).M}
+        at |= specified_sag(model, span)
         layers = given.get(span)
         if layers is not None:
             made[span] = Chosen(f"span {span}", layers, bottom_checks(at, rules, layers, stirrup))
@@ -182,6 +184,7 @@ def _top_numbers(model: Model, materials: Mapping[str, float]) -> dict[int, list
         M_f = hogging(model, face)
         if M_f > 0:
             at = numbers_in(model, materials, face.span) | {"M_f": M_f}
+            at |= specified_hog(model, face)
             made.setdefault(face.support, []).append(at)
     return made
 

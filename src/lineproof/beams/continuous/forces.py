@@ -93,6 +93,12 @@ class Forces:
         chosen = tuple((reductions or {}).items())
         return cls(beam, kept, solution, made.names, made.factors, chosen)
 
+    def under(self, combinations: Sequence[Combination]) -> Forces:
+        """Return the forces of other combinations of the same loads, moments not redistributed."""
+        arrangements = all_placements(len(self.beam.spans))
+        made = cases_of(self.solution.rows, combinations, arrangements)
+        return Forces(self.beam, self.loads, self.solution, made.names, made.factors)
+
     @cached_property
     def solved(self) -> CaseSolution:
         """The solution of every case."""

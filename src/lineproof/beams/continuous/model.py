@@ -6,9 +6,10 @@ The model is rebuilt from the sheet whenever it is needed, so that cells may be 
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
-from functools import lru_cache
+from dataclasses import dataclass, replace
+from functools import cached_property, lru_cache
 
+from lineproof.beams.analysis.arrangements import service_combinations
 from lineproof.beams.analysis.model import (
     Beam,
     Load,
@@ -109,6 +110,13 @@ class Model:
     def imported(self) -> ImportedForces | None:
         """The forces of an office's frame analysis, if they stand for our own."""
         return self.forces if isinstance(self.forces, ImportedForces) else None
+
+    @cached_property
+    def specified(self) -> Model | None:
+        """The beam under specified loads, moments not redistributed; None of imported moments."""
+        if self.imported is not None:
+            return None
+        return replace(self, forces=self.forces.under(service_combinations(self.kinds())))
 
     def on_span(self, span: int) -> tuple[SingleLoad, ...]:
         """Return the single loads of a span."""

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
 
-from lineproof.beams.continuous.case_forces import factor_text
+from lineproof.beams.continuous.case_forces import FACTORED, SPECIFIED, Names, factor_text
 from lineproof.beams.continuous.groups import named
 from lineproof.beams.continuous.imported_restraint import record_load_terms, span_loads
 from lineproof.beams.continuous.model import Model
@@ -94,17 +94,32 @@ def record_restraint(steps: Steps, model: Model, support: int, span: int) -> Non
     carrier = model.inputs.supports[support - 1].carrier
     text = _TEXT if model.imported is None else _TEXT_IMPORTED
     sheet.note("restraint", text.format(carrier=carrier), title="Restraint", basis=COMMON_PRACTICE)
+    _record_moment(steps, model, support, span, FACTORED)
+
+
+def record_specified_restraint(steps: Steps, model: Model, support: int, span: int) -> None:
+    """Record inside the open part M_s of the same restraint, ``model`` under specified loads."""
+    _record_moment(steps, model, support, span, SPECIFIED)
+
+
+def _record_moment(steps: Steps, model: Model, support: int, span: int, of: Names) -> None:
     _, row = worst_case(model, span)
     case = str(model.forces.cases[row])
     terms, bound = _terms(model, span, row)
     bound["l"] = model.lengths[span - 1]
-    text = f"w_f = {' + '.join(terms)}"
+    text = f"{of.w} = {' + '.join(terms)}"
     smeared = ", single loads smeared" if model.on_span(span) else ""
-    w_f = sheet.line(
+    load = model.sheet.line(
         stated(text), title=f"Load on span {span}{smeared}: {case}", **named(bound, text)
     )
-    steps.bind(w_f=w_f, l=model.lengths[span - 1])
-    steps.line(_FORMULAS[carrier])
+    steps.bind(**{of.w: load, "l": model.lengths[span - 1]})
+    formula = _FORMULAS[model.inputs.supports[support - 1].carrier]
+    if of is FACTORED:
+        steps.line(formula)
+        return
+    title = f"{formula.title}, specified loads"
+    made = model.sheet.line(formula, symbol=of.M, title=title, w_f=load, l=steps.entry("l"))
+    steps.bind(**{of.M: made})
 
 
 def _terms(model: Model, span: int, row: int) -> tuple[list[str], dict[str, Entry]]:

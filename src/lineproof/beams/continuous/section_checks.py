@@ -14,7 +14,14 @@ from lineproof.beams.continuous.numbers import Numbers, holds, put, utilisation,
 from lineproof.beams.inputs import Shape
 from lineproof.beams.section import SPREAD_AREAS, TENSION_WIDTHS
 from lineproof.formula import Formula
-from lineproof.standards.a23_3 import bars, crack_control, development, flexure, minimum
+from lineproof.standards.a23_3 import (
+    bars,
+    crack_control,
+    deflection,
+    development,
+    flexure,
+    minimum,
+)
 from lineproof.standards.a23_3.bars import BARS
 
 Checks = dict[str, float]
@@ -172,10 +179,32 @@ def _minimum(at: Numbers, rules: Rules, width: Formula, *, top: bool) -> Checks:
     return {test.key: used}
 
 
-def _cracks(at: Numbers, area: Formula) -> Checks:
-    put(at, crack_control.STRESS_ALLOWANCE, crack_control.D_C, crack_control.D_S)
-    put(at, crack_control.BAR_COUNT, area, crack_control.Z)
-    return {crack_control.CRACKS.key: utilisation(crack_control.CRACKS, at)}
+def _cracks(at: Numbers, area: Formula, standing: float) -> Checks:
+    """Return the check of cracks: ``standing`` bars [mm2] share them, those of ``at`` stretch.
+
+    The stress is calculated from ``M_s``, where there is one, if the allowance does not do.
+    """
+    around = at | {"A_s": standing}
+    put(around, crack_control.D_C, crack_control.D_S)
+    put(around, crack_control.BAR_COUNT, area)
+    if "M_s" in at and not holds(crack_control.ALLOWANCE_DOES, around):
+        around["f_s"] = _stress(at)
+    else:
+        put(around, crack_control.STRESS_ALLOWANCE)
+    put(around, crack_control.Z)
+    return {crack_control.CRACKS.key: utilisation(crack_control.CRACKS, around)}
+
+
+def _stress(at: Numbers) -> float:
+    """Return the stress of the bars due to M_s, cracked section [MPa]."""
+    own = dict(at)
+    put(own, deflection.MODULAR_RATIO, deflection.AXIS)
+    if own["b"] > own["b_w"] and not holds(deflection.AXIS_IN_FLANGE, own):
+        own["kd"] = put(own, deflection.AXIS_IN_WEB)
+        put(own, deflection.CRACKED_TEE)
+    else:
+        put(own, deflection.CRACKED)
+    return value(crack_control.STRESS, own)
 
 
 def bottom_checks(at: Numbers, rules: Rules, layers: BarLayers, stirrup: str) -> Checks:
@@ -188,7 +217,7 @@ def bottom_checks(at: Numbers, rules: Rules, layers: BarLayers, stirrup: str) ->
     made |= _minimum(at, rules, minimum.WIDTH_WEB, top=False)
     largest = max(layers, key=lambda layer: layer.diameter)
     at["A_b"] = BARS.number(largest.size, "A_b")
-    return made | _cracks(at, crack_control.TENSION_AREA)
+    return made | _cracks(at, crack_control.TENSION_AREA, at["A_s"])
 
 
 def top_checks(
@@ -209,7 +238,7 @@ def top_checks(
         at["h_f"] = flange
     made |= _minimum(at, rules, TENSION_WIDTHS[rules.shape], top=True)
     at["A_b"] = max(BARS.number(group.size, "A_b") for group in top.groups)
-    return made | _cracks(at | {"A_s": standing}, TENSION_AREAS[rules.shape])
+    return made | _cracks(at, TENSION_AREAS[rules.shape], standing)
 
 
 def fails(checks: Checks) -> bool:

@@ -32,6 +32,21 @@ STRESS_ALLOWANCE = _formula(
     title="Stress under specified loads, by the allowance",
     basis=FROM_MEMORY,
 )
+ALLOWANCE_DOES = _criterion(
+    "0.6*f_y*(d_c*A_e)**(1/3) <= z_max",
+    clause="10.6.1",
+    title="Whether the allowance for the stress, 0.6 f_y, is enough",
+    basis=FROM_MEMORY,
+    yes="With the allowance the bars are close enough.",
+    no="With the allowance they are not: the stress under specified loads is calculated.",
+    key="stress-allowance",
+)
+STRESS = _formula(
+    "f_s = n_E*M_s*(d - kd)/I_cr",
+    clause="10.6.1",
+    title="Stress under specified loads, cracked section",
+    basis=MECHANICS,
+)
 D_C = _formula(
     "d_c = c_c + d_bs + d_b/2",
     clause="10.6.1",
@@ -154,6 +169,7 @@ SKIN_CLOSE = _criterion(
 
 FORMULAS = (
     STRESS_ALLOWANCE,
+    STRESS,
     D_C,
     D_S,
     BAR_COUNT,
@@ -168,5 +184,5 @@ FORMULAS = (
     SKIN_DEPTH,
     SKIN_SPACING,
 )
-CRITERIA = (CRACKS, NEEDS_SKIN, SKIN_PROVIDED, SKIN_CLOSE)
+CRITERIA = (ALLOWANCE_DOES, CRACKS, NEEDS_SKIN, SKIN_PROVIDED, SKIN_CLOSE)
 TABLES = (LIMITS,)

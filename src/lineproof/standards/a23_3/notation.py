@@ -135,6 +135,10 @@ _ROWS = (
     # one case on one span, seen from the nearer of its supports
     ("M_sn", "M", "s,n", "", "moment at the near support axis, with its sign", "kN.m"),
     ("M_sf", "M", "s,f", "", "moment at the far support axis, with its sign", "kN.m"),
+    ("M_qn", "M", "q,n", "", "moment at the near support axis, specified loads", "kN.m"),
+    ("M_qf", "M", "q,f", "", "moment at the far support axis, specified loads", "kN.m"),
+    ("V_qn", "V", "q,n", "", "shear at the near support axis, specified loads", "kN"),
+    ("x_q", "x", "q", "", "distance from the near axis to the moment by specified loads", "m"),
     ("V_sn", "V", "s,n", "", "shear at the near support axis, upward on the span", "kN"),
     ("x_f", "x", "", "", "distance of the section from the near support axis", "m"),
     ("b_sn", "b", "s,n", "", "width of the near support along the beam", "mm"),
@@ -249,7 +253,7 @@ _ROWS = (
     ("S_t", "S", "", "", "factor for the duration of the sustained load", ""),
     ("zeta_s", "ζ", "s", "", "total over immediate deflection, sustained load", ""),
     ("zeta_sa", "ζ", "sa", "", "ζs up to the attachment of the parts carried", ""),
-    ("w_s", "w", "s", "", "specified load of the stage", "kN/m"),
+    ("w_s", "w", "s", "", "specified load", "kN/m"),
     ("M_m", "M", "m", "", "moment at midspan due to the load of the stage", "kN.m"),
     ("M_h1", "M", "h1", "", "negative moment at the first end, load of the stage", "kN.m"),
     ("M_h2", "M", "h2", "", "negative moment at the second end, load of the stage", "kN.m"),
@@ -264,7 +268,7 @@ _ROWS = (
     ("delta_at", "Δ", "at", "", "deflection after attachment of the parts carried", "mm"),
     ("delta_t", "Δ", "t", "", "total deflection", "mm"),
     # deflection by stages of loading
-    ("M_s", "M", "s", "", "moment due to the load of the stage", "kN.m"),
+    ("M_s", "M", "s", "", "moment due to specified loads", "kN.m"),
     ("M_ae", "M", "a,e", "", "largest moment of earlier stages, construction included", "kN.m"),
     ("M_am", "M", "a,m", "", "largest moment at midspan up to the stage", "kN.m"),
     ("M_a1", "M", "a1", "", "largest negative moment at the first end up to the stage", "kN.m"),
