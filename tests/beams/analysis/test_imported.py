@@ -208,6 +208,22 @@ def test_a_file_with_m_or_v_turned_throughout_is_told_once(column: int) -> None:
     assert fault.endswith("write M or V with the other sign")
 
 
+def test_one_span_with_m_and_v_turned_is_refused() -> None:
+    """It closes by statics: its load acts upward in every case, of 1.25D at the least.
+
+    Span 2 of 6 m carries D = 30 and L = 20 N/mm; in 0.9D alone V rises by 0.9*30*6 = 162 kN.
+    """
+
+    def turned(line: str) -> str:
+        cells = line.split(",")
+        if cells[0] == "2":
+            cells[4:6] = [str(-float(cell)) for cell in cells[4:6]]
+        return ",".join(cells)
+
+    (fault,) = faults(lambda: forces([turned(line) for line in rows()]))
+    assert "span 2: no case loads it downward, V falls by -162 kN at most (0.9D" in fault
+
+
 def test_shears_in_the_wrong_unit_are_found() -> None:
     header = HEADER.replace("(kN)", "(N)")
     assert any("but V gives" in fault for fault in faults(lambda: forces(header=header)))

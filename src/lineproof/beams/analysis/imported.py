@@ -102,6 +102,7 @@ def read_forces(
     _check_once(table, faults)
     _check_signs(table, faults)
     faults.raise_if_any()
+    _check_downward(table, faults)
     known = breaks or {}
     largest = _largest(table)
     for case, spans in table.items():
@@ -164,6 +165,28 @@ def _check_signs(table: Table, faults: FileFaults) -> None:
             "file; here M is positive where the bottom is in tension and grows where V is "
             "positive; write M or V with the other sign"
         )
+
+
+def _check_downward(table: Table, faults: FileFaults) -> None:
+    """Find spans that no case loads downward: both M and V have the wrong sign there.
+
+    By statics alone such a span passes, and bars would be chosen for it at the wrong face.
+    """
+    most: dict[int, tuple[float, LoadCase]] = {}
+    shear: dict[int, float] = defaultdict(float)
+    for case, spans in table.items():
+        for number, rows in spans.items():
+            load = rows[0].V - rows[-1].V
+            shear[number] = max(shear[number], *(abs(row.V) for row in rows))
+            if number not in most or load > most[number][0]:
+                most[number] = load, case
+    for number, (load, case) in sorted(most.items()):
+        if load < -TOLERANCE * shear[number]:
+            faults.add(
+                f"span {number}: no case loads it downward, V falls by {load / 1e3:g} kN at most "
+                f"({case}); here V is positive at the left end of a span under gravity load, and "
+                "M where the bottom is in tension; write both with the other sign in this span"
+            )
 
 
 def _check_stations(

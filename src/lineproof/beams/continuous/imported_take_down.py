@@ -95,6 +95,6 @@ def _check_load(model: Model, span: int) -> None:
             title=f"Load of the file on span {span} against the load take-down",
             yes="The file carries the load of the take-down, or nearly.",
             no="The file does NOT carry the load of the take-down: its loads are not factored, or "
-            "of another beam, a combination is left out, or both M and V have the wrong sign.",
+            "of another beam, or a combination is left out.",
         )
     )  # fmt: skip
