@@ -55,8 +55,9 @@ def csv_text(content: bytes, name: str) -> str:
     try:
         text = content.decode("utf-8-sig")
     except UnicodeDecodeError as error:
+        line = 1 + content.count(b"\n", 0, error.start)
         raise UserError(
-            f"{name}: not UTF-8 at byte {error.start}; save it as 'CSV UTF-8'"
+            f"{name}: line {line}: not UTF-8 at byte {error.start}; save it as 'CSV UTF-8'"
         ) from None
     if "\0" in text:
         raise UserError(f"{name}: holds zero bytes; it is no text, save it as 'CSV UTF-8'")

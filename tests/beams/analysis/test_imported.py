@@ -120,9 +120,13 @@ def changed(place: int, column: int, text: str) -> list[str]:
         (4, "\u0661\u0662", "is not a number"),
         (4, "1e999", "beyond anything a beam carries"),
         (4, "1e12", "beyond anything a beam carries; look at the unit"),
-        (0, "1.5", "line 5, span: '1.5' is not a number"),
+        (0, "1.5", "line 5, span: '1.5' is not a whole number; write it like 2"),
+        (4, "12.5 kN.m", "M: '12.5 kN.m' is not a number; write it like -12.5"),
+        (4, "1 234.5", "M: '1 234.5' has marks between thousands; write its digits without"),
+        (4, "1'234'567", "has marks between thousands"),
+        (4, "1\u202f234", "has marks between thousands"),
         (0, "7", "line 5: span 7; the beam has 2"),
-        (1, "9.5", "line 5: station 9.5 m is outside span 1 of 8 m"),
+        (1, "9.5", "line 5: station 9.5 m is outside span 1 of 8 m; write stations from the left"),
         (1, "-1", "line 5: station -1 m is outside span 1"),
     ],
 )
@@ -130,6 +134,21 @@ def test_a_hostile_or_wrong_cell_is_named(column: int, cell: str, words: str) ->
     found = faults(lambda: forces(changed(3, column, cell)))
     assert found[0].startswith("forces: line 5")
     assert words in found[0]
+
+
+def test_a_minus_as_printed_is_read() -> None:
+    """U+2212, as typed quantities may have it, and as text copied from a page has it."""
+    read = forces([line.replace("-", "\u2212") for line in rows()])
+    assert np.array_equal(read.envelope.M, forces().envelope.M)
+    assert np.array_equal(read.envelope.V, forces().envelope.V)
+
+
+def test_a_comma_that_may_part_thousands_is_not_called_a_decimal_one() -> None:
+    """1,234 kN.m read as 1.234 kN.m would be a thousandth."""
+    found = faults(lambda: forces(changed(3, 4, '"1,234"')))
+    assert "M: '1,234' has a comma; write a point if it is a decimal one, nothing if" in found[0]
+    found = faults(lambda: forces(changed(3, 4, '"1,234.5"')))
+    assert "M: '1,234.5' has marks between thousands" in found[0]
 
 
 def test_a_decimal_comma_is_explained() -> None:
@@ -145,6 +164,8 @@ def test_a_decimal_comma_is_explained() -> None:
         (HEADER.replace("M (kN.m)", "M (kN)"), "has 'kN', a unit of force"),
         (HEADER.replace("M (kN.m)", "M (kNn)"), "'kNn' is not a unit of the list"),
         (HEADER.replace("M (kN.m)", "moment (kN.m)"), "heading 'moment (kN.m)' is not known"),
+        (HEADER + ",N (kN)", "line 1: heading 'N (kN)' is not known; take the column out, or"),
+        (HEADER + ",", "line 1: column 8 has no heading; take it out"),
         (HEADER.replace("M (kN.m)", "V (kN)"), "heading 'V (kN)' stands twice"),
         (HEADER.replace("case", "case (kN)"), "heading 'case' takes no unit"),
         (HEADER.replace("T (kN.m)", "M" * 500), "is not known"),
@@ -155,6 +176,17 @@ def test_a_wrong_heading_is_named(header: str, words: str) -> None:
     assert any(words in fault for fault in faults(lambda: forces(header=header)))
 
 
+@pytest.mark.parametrize("first", [HEADER.replace(",", "\t"), "sep=,", "Frame B7,,,,,,"])
+def test_a_first_line_without_headings_is_told_once(first: str) -> None:
+    (fault,) = faults(lambda: forces([HEADER, *rows()], first))
+    assert "are no headings; write 'span,station (m),case,combination,M (kN.m),V (kN)'" in fault
+
+
+def test_a_space_that_does_not_break_is_one_in_a_heading() -> None:
+    read = forces(header=HEADER.replace(" ", "\u00a0"))
+    assert np.array_equal(read.envelope.M, forces().envelope.M)
+
+
 @pytest.mark.parametrize(
     ("content", "words"),
     [
@@ -162,9 +194,13 @@ def test_a_wrong_heading_is_named(header: str, words: str) -> None:
         (b"\n\n", "the file is empty"),
         (HEADER.encode(), "no rows under the headings"),
         (HEADER.encode() + b"\n1,2\n", "line 2: 2 cells under 7 headings"),
+        (
+            HEADER.encode() + b"\n1,0,5,all,A,0,0,0",
+            "8 cells under 7 headings; write decimal points",
+        ),
         (HEADER.encode() + b'\n1,"2,3', "line 2: a quotation mark is not closed"),
         (HEADER.encode("utf-16"), "not UTF-8"),
-        (HEADER.encode() + b"\n1,0,\xe9,A,0,0,0", "not UTF-8 at byte"),
+        (HEADER.encode() + b"\n1,0,\xe9,A,0,0,0", "line 2: not UTF-8 at byte"),
         (HEADER.encode() + b"\n1,0,a\0b,A,0,0,0", "holds zero bytes"),
         (HEADER.encode() + b"\n" + b"1" * 2000, "line 2 is longer than 1000 characters"),
         (HEADER.encode() + b"\n1" * 200_001, "200002 lines, more than 200000"),
@@ -248,6 +284,12 @@ def test_missing_stations_spans_and_ends_are_found() -> None:
     first = next(r for r in all_rows if r.startswith("2,2.400"))
     without_one = [r for r in all_rows if r is not first]
     assert any("no station between 1.8 and 3 m" in f for f in faults(lambda: forces(without_one)))
+
+
+def test_a_span_that_the_first_case_misses_is_not_told_of_the_others() -> None:
+    without = [r for r in rows() if not (r.startswith("2,") and ",1.4D," in r)]
+    (fault,) = faults(lambda: forces(without))
+    assert fault.endswith("1.4D, all, span 2: no station; every case needs every span")
 
 
 def test_a_case_with_other_stations_than_the_first_is_found() -> None:

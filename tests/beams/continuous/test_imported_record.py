@@ -401,7 +401,7 @@ def test_a_file_of_other_spans_is_refused(files: dict[str, Any]) -> None:
     ("given", "words"),
     [
         ("no-such.csv", "'no-such.csv': no such file; write its path from the folder"),
-        (".", "'.': no such file"),
+        (".", "'.': a folder, no file; write its path"),
         ("", "is no path of a file"),
         ("a\u0000b.csv", "is no path of a file"),
         ("a\nb.csv", "is no path of a file"),

@@ -25,6 +25,22 @@ LONGEST_NAME = 80
 _NUMBER = re.compile(r"[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d{1,3})?", re.ASCII)
 _COUNT = re.compile(r"\d{1,4}", re.ASCII)
 _HEADER = re.compile(r"\s*(\w+)\s*(?:[(\[]([^()\[\]]{1,20})[)\]])?\s*", re.ASCII)
+_NO_BREAK, _MINUS = "\u00a0", "\u2212"
+"""The space that does not break, and the printed minus: both come with text copied from a page."""
+_MISWRITTEN = (
+    (
+        re.compile(
+            r"[+-]?\d{1,3}(,\d{3})+(\.\d*|,\d{3})|[+-]?\d{1,3}([ '\u00a0\u202f\u2019]\d{3})+\S*"
+        ),
+        "has marks between thousands; write its digits without, and a decimal point",
+    ),
+    (
+        re.compile(r"[+-]?[1-9]\d{0,2},\d{3}"),
+        "has a comma; write a point if it is a decimal one, nothing if it parts thousands",
+    ),
+    (re.compile(r"[+-]?[\d.]*,\d+"), "has a decimal comma; write a decimal point"),
+)
+"""Numbers as a spreadsheet may show them, and what to say of each."""
 _FORMULA = ("=", "+", "-", "@", "\t", "\r")
 """What a spreadsheet would take for the start of a formula."""
 
@@ -58,12 +74,17 @@ def read_table(content: bytes, name: str, columns: Sequence[Column]) -> list[Lin
     header = next(rows, None)
     if header is None:
         raise UserError(f"{name}: the file is empty; write {_sample(columns)} on its first line")
-    places = _places(header[1], columns, faults)
+    places = _places(*header, columns, faults)
     faults.raise_if_any()
     made = []
     for number, cells in rows:
         if len(cells) != len(header[1]):
-            faults.add(f"line {number}: {len(cells)} cells under {len(header[1])} headings")
+            cure = "; write decimal points, and names that hold commas in quotation marks"
+            more = len(cells) > len(header[1])
+            faults.add(
+                f"line {number}: {len(cells)} cells under {len(header[1])} headings"
+                f"{cure if more else ''}"
+            )
             continue
         read = [_cell(cells, place, number, faults) for place in places]
         made.append(Line(number, tuple(read)))
@@ -105,18 +126,29 @@ class _Place:
     factor: float = 1.0
 
 
-def _places(header: Sequence[str], columns: Sequence[Column], faults: FileFaults) -> list[_Place]:
+def _places(
+    number: int, header: Sequence[str], columns: Sequence[Column], faults: FileFaults
+) -> list[_Place]:
     found: dict[str, tuple[int, str]] = {}
+    unknown: list[str] = []
     known = {column.name.lower(): column for column in columns}
     for at, cell in enumerate(header):
-        match = _HEADER.fullmatch(cell[:LONGEST_NAME])
+        match = _HEADER.fullmatch(cell[:LONGEST_NAME].replace(_NO_BREAK, " "))
         word = match[1].lower() if match else ""
         if word not in known:
-            faults.add(f"heading {echo(cell)} is not known; write {_sample(columns)}")
+            unknown.append(_unknown(cell, at, columns))
         elif word in found:
             faults.add(f"heading {echo(cell)} stands twice")
         elif match:
             found[word] = (at, match[2] or "")
+    if not found:
+        faults.add(
+            f"line {number}: {echo(','.join(header))} are no headings; write {_sample(columns)} on "
+            "the first line, with commas or semicolons between"
+        )
+        return []
+    for fault in unknown:
+        faults.add(f"line {number}: {fault}")
     places = []
     for column in columns:
         place = found.get(column.name.lower())
@@ -127,6 +159,12 @@ def _places(header: Sequence[str], columns: Sequence[Column], faults: FileFaults
         if column.needed:
             faults.add(f"column {column.name!r} is missing; write {_sample(columns)}")
     return places
+
+
+def _unknown(cell: str, at: int, columns: Sequence[Column]) -> str:
+    if not cell.strip():
+        return f"column {at + 1} has no heading; take it out"
+    return f"heading {echo(cell)} is not known; take the column out, or write {_sample(columns)}"
 
 
 def _factor(column: Column, unit: str, faults: FileFaults) -> float:
@@ -156,9 +194,9 @@ def _cell(cells: Sequence[str], place: _Place, number: int, faults: FileFaults) 
     where = f"line {number}, {column.name}"
     if column.kind == "text":
         return _name(cell, where, faults)
-    text = cell.strip()
+    text = cell.strip().replace(_MINUS, "-")
     if not (_COUNT if column.kind == "count" else _NUMBER).fullmatch(text):
-        faults.add(f"{where}: {echo(cell)} {_what_is_wrong(text)}")
+        faults.add(f"{where}: {echo(cell)} {_what_is_wrong(text, column.kind)}")
         return 0.0
     value = float(text) * place.factor
     if column.most and not abs(value) <= column.most:
@@ -167,14 +205,17 @@ def _cell(cells: Sequence[str], place: _Place, number: int, faults: FileFaults) 
     return value
 
 
-def _what_is_wrong(text: str) -> str:
+def _what_is_wrong(text: str, kind: Kind) -> str:
     if not text:
         return "is empty; write a number"
     if text.startswith("="):
         return "is a formula; save the values, not the formulas"
-    if re.fullmatch(r"[+-]?[\d.]*,\d+", text):
-        return "has a decimal comma; write a decimal point"
-    return "is not a number; write it like -12.5"
+    if kind == "count":
+        return "is not a whole number; write it like 2"
+    return next(
+        (words for pattern, words in _MISWRITTEN if pattern.fullmatch(text)),
+        "is not a number; write it like -12.5",
+    )
 
 
 def _name(cell: str, where: str, faults: FileFaults) -> str:

@@ -129,7 +129,7 @@ def _table(lines: Sequence[Line], lengths: Sequence[float], faults: FileFaults) 
         if not -ROUNDED <= station <= length + ROUNDED:
             faults.add(
                 f"line {line.number}: station {station / 1000:g} m is outside span {number} of "
-                f"{length / 1000:g} m"
+                f"{length / 1000:g} m; write stations from the left axis of their span"
             )
             continue
         end = next((e for e in (0.0, length) if abs(station - e) <= ROUNDED), station)
@@ -277,7 +277,7 @@ def _check_alike(table: Table, lengths: Sequence[float], faults: FileFaults) -> 
         wanted = _places(table[first].get(number, ()))
         for case in others:
             found = _places(table[case].get(number, ()))
-            for x, side in sorted(set(wanted) ^ set(found)) if found else ():
+            for x, side in sorted(set(wanted) ^ set(found)) if wanted and found else ():
                 what = "misses" if (x, side) in wanted else "has"
                 faults.add(
                     f"{case}, span {number}: {what} the {side} side of the station {x / 1000:g} m, "
@@ -326,8 +326,9 @@ def read_reactions(
     faults = FileFaults(name)
     found = _by_support(read_table(content, name, REACTIONS), faults)
     jumps = dict(_jumps(forces.envelope))
-    for case, support in found.keys() - jumps.keys():
-        faults.add(f"{case}, support {support}: no such case or support in the forces")
+    for case, support in found:
+        if (case, support) not in jumps:
+            faults.add(f"{case}, support {support}: no such case or support in the forces")
     largest: dict[LoadCase, float] = defaultdict(float)
     for (case, _), jump in jumps.items():
         largest[case] = max(largest[case], abs(jump))

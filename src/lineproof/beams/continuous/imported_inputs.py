@@ -78,8 +78,9 @@ def read_bytes(name: str, given: object) -> bytes:
     path = _path(name, given)
     try:
         if not path.is_file():
+            what = "a folder, no file" if path.is_dir() else "no such file"
             raise UserError(
-                f"{name}: {echo(str(given))}: no such file; write its path from the folder of the "
+                f"{name}: {echo(str(given))}: {what}; write its path from the folder of the "
                 "notebook, like 'frame.csv'"
             )
         with path.open("rb") as stream:
