@@ -248,13 +248,54 @@ def test_declarations_are_found_however_they_are_hidden(
         ("0%", 0.5, "0.5 (shown in percent)"),
         ("0,", 600000, "600000 (shown in thousands)"),
         ("#,##0", 600, "600"),
-        ('0.0" % of steel"', 0.5, "0.5"),
+        ('0.0" % of steel"', 0.5, "0.5 % of steel"),
     ],
 )
 def test_a_format_that_shows_another_number_is_told(
     tmp_path: Path, shown: str, stored: float, read: str
 ) -> None:
     """50 % is shown where 0.5 is stored: neither may be taken for the claim in silence."""
+    path = workbook(tmp_path, [["id", "claimed"], ["a", stored]])
+    book = load_workbook(path)
+    book.worksheets[0]["B2"].number_format = shown
+    book.save(path)
+    assert read_table(path).rows[0].cells["claimed"] == read
+
+
+@pytest.mark.parametrize(
+    ("shown", "stored", "read"),
+    [
+        ("0.00_ ", 620, "620.00"),
+        ('_(* #,##0.00_);_(* (#,##0.00);_(* "-"??_);_(@_)', -1620, "-1620.00"),
+        ('_(* #,##0.00_);_(* (#,##0.00);_(* "-"??_);_(@_)', 0, "0"),
+        ("0.0#", 0.25, "0.25"),
+        ("0.0#", 620, "620.0"),
+        ("0", 2.5, "3"),
+        ("0.00", 1.005, "1.01"),
+        ("+0.0;-0.0", 12, "12.0"),
+        ("+0.0;-0.0", -12, "-12.0"),
+        ("0.0;[Red]0.0", -12, "-12.0"),
+        ('0.0" in"', 24.4, "24.4 in"),
+        ("0\\ \\m\\m", 620, "620 mm"),
+        ('General" kN"', 12.5, "12.5 kN"),
+        ('[>=1000]0.0," MN";0.0" kN"', 900, "900.0 kN"),
+        ('[>=1000]0.0," MN";0.0" kN"', 1200, "1200 (shown in thousands)"),
+        ('"approx. "0', 12, "approx. 12"),
+        ("[$$-409]#,##0.00", 12, "$ 12.00"),
+        ('"= "0', 12, "12 (shown with '=' before it)"),
+        ("0.0;0.0", -12, "-12 (shown without its sign)"),
+        (";;;", 12, "12 (hidden by its format)"),
+        ('"see page"', 12, "12 (shown as 'see page')"),
+    ],
+)
+def test_a_number_reads_as_its_format_shows_it(
+    tmp_path: Path, shown: str, stored: float, read: str
+) -> None:
+    """Sections, places and literals as ECMA-376 Part 1, 18.8.30 and 18.8.31, give them.
+
+    The sections are for positive, negative and zero; a place 0 is always shown, # and ? only where
+    there is a digit; halves are rounded up. The unit in a format is what a checker sees.
+    """
     path = workbook(tmp_path, [["id", "claimed"], ["a", stored]])
     book = load_workbook(path)
     book.worksheets[0]["B2"].number_format = shown

@@ -26,7 +26,8 @@ _DATE = re.compile(
 )
 DATE_ADVICE = "type it again in a cell of the format text"
 _PERCENT = re.compile(r"([+-]?\d*\.?\d+) ?%\Z")
-_STORED = re.compile(r"(\S+) \(shown in (\w+)\)\Z")
+_STORED = re.compile(r"(\S+) \(((?:shown (?:in|as|with|without)|hidden by) .+)\)\Z")
+"""A number of a workbook whose format shows another, as ``claims.shown`` tells it."""
 _BRACKETS = re.compile(r"\(([\d.]+)\)|([\d.]+)-\Z")
 _COUNTED = re.compile(r"([+-]?\d+\.?\d*) [A-Za-z].*")
 
@@ -74,7 +75,7 @@ def _as_format(_: Node, text: str) -> str:
     stored = _STORED.match(text)
     if stored is None:
         return ""
-    return f"holds {stored[1]} and shows it in {stored[2]}; write the number meant as a plain one"
+    return f"holds {stored[1]}, {stored[2]}; write the number meant as a plain one"
 
 
 def _as_percent(node: Node, text: str) -> str:

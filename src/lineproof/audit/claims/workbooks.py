@@ -10,6 +10,7 @@ import zlib
 from collections.abc import Iterator, Sequence
 from typing import TYPE_CHECKING
 
+from lineproof.audit.claims.shown import shown_number
 from lineproof.errors import UserError
 
 if TYPE_CHECKING:
@@ -28,14 +29,10 @@ _MERGED = re.compile(rb"<(?:\w+:)?mergeCell\s[^>]{0,80}?ref=[\"']([A-Z0-9:$]{1,3
 _ROW = re.compile(rb"<(?:\w{1,20}:)?row\s[^>]{0,400}?\br=[\"'](\d{1,9})[\"']")
 _VALUES = (b"<v>", b"<is>", b":v>", b":is>")
 _SHEET = re.compile(r"xl/worksheets/[^/]+\.xml", re.IGNORECASE)
-_DECIMALS = re.compile(r"(?:#,##)?0(?:\.(0+))?\Z")
-_POWERS = re.compile(r"0(?:\.(0+))?E\+0+\Z")
-_GENERAL_DIGITS = 10
 _ENCODING = re.compile(
     rb"[\xef\xbb\xbf\xfe\xff]{0,3}\s*<\?xml\s[^>]{0,200}?encoding\s*=\s*[\"']([^\"']{0,40})"
 )
 _ENCODINGS = (b"utf-8", b"utf8", b"utf-16", b"utf-16le", b"utf-16be", b"us-ascii", b"iso-8859-1")
-_QUOTED = re.compile(r"\"[^\"]*\"|\\.|\[[^\]]*\]")
 _WIDTHS = {"id": 26, "label": 8, "place": 44, "symbol": 10, "title": 48, "claimed": 14, "where": 18}
 
 
@@ -149,33 +146,7 @@ def _shown(cell: Cell) -> str:
     if isinstance(value, bool) or not isinstance(value, int | float):
         is_date = isinstance(value, dt.date | dt.time | dt.timedelta)
         return f"{value} (a date)" if is_date else str(value)
-    return _number(value, str(cell.number_format or "General"))
-
-
-def _number(value: float, shown: str) -> str:
-    """Return a number as a format shows it."""
-    plain = _DECIMALS.match(shown)
-    if plain:
-        return f"{value:.{len(plain[1] or '')}f}"
-    scaled = _scaled(shown)
-    if scaled:
-        return f"{value:.{_GENERAL_DIGITS}g} {scaled}"
-    powers = _POWERS.match(shown)
-    if powers:
-        return f"{value:.{len(powers[1] or '')}e}"
-    return str(value) if isinstance(value, int) else f"{value:.{_GENERAL_DIGITS}g}"
-
-
-def _scaled(shown: str) -> str:
-    """Say that a format shows another number than the cell holds; "" for all others.
-
-    >>> _scaled("0.0%"), _scaled("0,"), _scaled('0 "%"')
-    ('(shown in percent)', '(shown in thousands)', '')
-    """
-    bare = _QUOTED.sub("", shown.partition(";")[0])
-    if "%" in bare:
-        return "(shown in percent)"
-    return "(shown in thousands)" if re.search(r"[0#?],+(?![0#?,])", bare) else ""
+    return shown_number(value, str(cell.number_format or "General"))
 
 
 def workbook_bytes(headings: Sequence[str], rows: Sequence[Sequence[str]]) -> bytes:
