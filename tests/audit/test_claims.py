@@ -242,6 +242,12 @@ def test_bars_claimed_for_their_area_are_read_by_the_bar_table(
         ("4Ø20", "may be 4-20M (1200 mm2) or 4 round bars of 20 mm (1257 mm2); write '4-20M', or"),
         # 3 x 500 mm2; 3 pi 25^2/4 = 1472.6 mm2.
         ("3 - ø 25 mm", "may be 3-25M (1500 mm2) or 3 round bars of 25 mm (1473 mm2); write"),
+        # As many, with the letters of other standards for the diameter.
+        ("4T20", "may be 4-20M (1200 mm2) or 4 round bars of 20 mm (1257 mm2); write '4-20M', or"),
+        ("4 dia 20", "may be 4-20M (1200 mm2) or 4 round bars of 20 mm (1257 mm2)"),
+        ("4-20", "names bars in a way that is not read; write them such as '4-20M'"),
+        ("4-#6", "names bars in a way that is not read"),
+        ("10M@200", "names bars in a way that is not read"),
         ("4Ø16", "names bars in a way that is not read; write them such as '4-20M'"),
         ("4-20M (bottom)", "names bars in a way that is not read; write them such as '4-20M'"),
         ("4-20M E.F.", "or write their area such as '1200 mm2'"),
@@ -276,6 +282,15 @@ def test_bars_are_no_area_that_a_moment_requires(tmp_path: Path) -> None:
     )
 
 
+def test_a_bar_is_no_number_for_its_diameter_or_area(tmp_path: Path) -> None:
+    """20M is no 20 metres: 19.5 mm and 300 mm2 by the bar table (CSA G30.18)."""
+    given = {"n_b": "4", "A_b": "300 mm2", "d_b": "19.5 mm"}
+    graph = Graph(sheet_of({"A_s = n_b*A_b": "mm2"}, given).close())
+    said = faults(graph, tmp_path, "id,claimed\ngiven/A_b,20M\ngiven/d_b,20m\n")
+    assert "A_b: '20M' names a bar; write '300 mm2'" in said[0]
+    assert "d_b: '20m' names a bar; write '19.5 mm'" in said[1]
+
+
 def test_bars_of_a_size_that_there_is_not(graph: Graph, tmp_path: Path) -> None:
     (said,) = faults(graph, tmp_path, "id,claimed\nbeam/A_s,4-22M\n")
     assert said.startswith("row 2, claimed: A_s: '22M' is not a Canadian bar")
@@ -289,6 +304,9 @@ def test_bars_of_a_size_that_there_is_not(graph: Graph, tmp_path: Path) -> None:
         ("strength/M_r", "207 kN•m", 207e6),
         ("strength/M_r", "'207", 207e6),
         ("beam/A_s", "1.200 mm²", 1.2),
+        ("strength/M_r", "2.07×10² kN.m", 207e6),
+        ("strength/M_r", "2.07 x 10^8 N.mm", 207e6),
+        ("strength/M_r", "207·10⁻³ MN.m", 207e6),
     ],
 )
 def test_odd_spelling_with_one_meaning_is_read(
@@ -325,6 +343,16 @@ def test_odd_spelling_with_one_meaning_is_read(
             "#N/A",
             "is an error of a spreadsheet; write the value, or leave the cell empty",
         ),
+        ("beam/d", "#6", "d: '#6' is not a number with a unit"),
+        (
+            "beam/d",
+            "200 c/c",
+            "names bars or their spacing; write the number alone, such as '200 mm'",
+        ),
+        ("beam/d", "10M@200", "names bars or their spacing"),
+        ("beam/d", "@ 200 mm", "begins with @, as a formula may; write '200 mm'"),
+        ("beam/d", "@SUM(A1)", "is a formula; write the value that it shows"),
+        ("beam/d", "2.07x109", "'x109' is not a unit of the list"),
         ("beam/d", "tbd", "holds no number; write for example '25 mm', or leave the cell empty"),
         ("beam/d", "21.2 inchs", "not a unit of the list; write it in mm, cm, m, in, ft"),
         ("given/f_c", "30 kN/cm2", "not a unit of the list; write it in MPa, Pa, kPa"),

@@ -19,8 +19,16 @@ from lineproof.typeset.values import told
 
 _GROUP = re.compile(r"(\d{1,3})(?: ?[-–x×] ?| )(\d{2}M)\Z", re.ASCII | re.IGNORECASE)
 _BETWEEN = re.compile(r" ?(?:[+/]|\band\b) ?")
-_BY_DIAMETER = re.compile(r"(\d{1,3}) ?-? ?[ØøφΦ⌀] ?(\d{2})(?: ?mm)?\Z", re.ASCII)
-_NAMED = re.compile(r"(?<![\d.])\d\dM\b|[ØøφΦ⌀]", re.ASCII)
+_BY_DIAMETER = re.compile(
+    r"(\d{1,3}) ?-? ?(?:[ØøφΦ⌀THth]|[Dd]ia\.? ?) ?(\d{2})(?: ?mm)?\Z", re.ASCII
+)
+_NAMED = re.compile(
+    r"(?<![\d.])\d\dM\b|[ØøφΦ⌀#]|\d ?-? ?(?:[THth]|[Dd]ia\b\.? ?)\d\d\b|\d ?[-–x×] ?\d\d\Z",
+    re.ASCII,
+)
+"""What names bars: 20M, Ø20, #6, T20 or a number of bars and their size without its M."""
+_ONE_BAR = re.compile(r"(?:1-)?(\d\dM)\Z", re.ASCII | re.IGNORECASE)
+_OF_ONE = ("d_b", "A_b")
 _GIVEN_AREAS = ("A_s", "A_sp")
 """Areas of bars that a calculation of a section may take as given: in tension, in compression."""
 
@@ -51,6 +59,20 @@ def area_claimed(graph: Graph, node: Node, text: str) -> str:
         )
     areas = [n * Decimal(BARS.row(size, node.symbol)["A_b"]) for n, size in bars_in(text)]
     return f"{sum(areas)}"
+
+
+def refuse_one_bar(node: Node, text: str) -> None:
+    """Refuse a bar for its own diameter or area, and say its number: 20M would be 20 metres.
+
+    Raises :class:`UserError` with what to write.
+    """
+    named = _ONE_BAR.match(text)
+    column = next((name for name in _OF_ONE if node.symbol.startswith(name)), "")
+    if named and column:
+        of_bar = BARS.row(named[1].upper(), node.symbol)[column]
+        raise UserError(
+            f"{node.symbol}: {echo(text)} names a bar; write {f'{of_bar} {BARS.columns[column]}'!r}"
+        )
 
 
 def refuse_other_bars(graph: Graph, node: Node, text: str) -> None:

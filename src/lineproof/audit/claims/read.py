@@ -9,7 +9,12 @@ from dataclasses import dataclass
 from functools import cached_property
 from pathlib import Path
 
-from lineproof.audit.claims.bars import area_claimed, bars_in, refuse_other_bars
+from lineproof.audit.claims.bars import (
+    area_claimed,
+    bars_in,
+    refuse_one_bar,
+    refuse_other_bars,
+)
 from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.claims.tables import Row, Table, TableFaults, read_with_faults
 from lineproof.audit.claims.typed import DATE_ADVICE, is_date, read_claimed
@@ -203,6 +208,7 @@ class _Reader:
         try:
             text = f"{area_claimed(self.graph, node, bars)} mm2" if bars else text
             unit = row.cells.get("unit") or row.cells.get("units", "")
+            refuse_one_bar(node, text)
             refuse_other_bars(self.graph, node, text)
             read = read_claimed(node, text, unit)
         except UserError as error:

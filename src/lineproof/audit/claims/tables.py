@@ -153,12 +153,21 @@ def _cells(
         if len(text) > LONGEST_CELL:
             faults.at(number, column, f"holds more than {LONGEST_CELL} characters; shorten it")
         elif text.startswith(("=", "＝", "@", "＠")):
-            faults.at(number, column, f"{echo(text)} is a formula; write the value that it shows")
+            cure = _not_as_formula(text)
+            faults.at(number, column, f"{echo(text)} {cure}")
         elif at >= len(headings):
             faults.at(number, column, f"{echo(text)} stands beyond the last heading; name it")
         else:
             found[column] = _without_apostrophe(text)
     return found
+
+
+def _not_as_formula(text: str) -> str:
+    """Say what is wrong with a cell that begins as a formula does: @200 may be a spacing."""
+    spacing = text.lstrip("@＠ ")
+    if spacing != text and spacing[:1].isdigit():
+        return f"begins with @, as a formula may; write {spacing!r}"
+    return "is a formula; write the value that it shows"
 
 
 def _without_apostrophe(text: str) -> str:

@@ -29,6 +29,13 @@ _PERCENT = re.compile(r"([+-]?\d*\.?\d+) ?%\Z")
 _STORED = re.compile(r"(\S+) \(((?:shown (?:in|as|with|without)|hidden by) .+)\)\Z")
 """A number of a workbook whose format shows another, as ``claims.shown`` tells it."""
 _BRACKETS = re.compile(r"\(([\d.]+)\)|([\d.]+)-\Z")
+_ERROR = re.compile(r"#[A-Z]")
+_AT_SPACING = re.compile(r"@|\b[oc]\.?/?c\b", re.IGNORECASE)
+_POWER = re.compile(
+    r"(?<=[\d.]) ?[×x*·⋅•] ?10(?:(?:\^|\*\*)\(?([+-]?\d{1,2})\)?|([⁺⁻]?[⁰¹²³⁴⁵⁶⁷⁸⁹]{1,2}))(?![\d.])"
+)
+"""A power of ten as written by hand: 1.66×10⁹, 1.66 x 10^9."""
+_RAISED = str.maketrans("⁺⁻⁰¹²³⁴⁵⁶⁷⁸⁹", "+-0123456789")
 _COUNTED = re.compile(r"([+-]?\d+\.?\d*) [A-Za-z].*")
 
 
@@ -43,7 +50,7 @@ def read_claimed(node: Node, typed: str, unit: str) -> Typed:
     Any dash before the digits is a minus. Raises :class:`UserError` with what to write where a
     text may be read in two ways, or in none.
     """
-    text = _MINUS.sub("-", " ".join(typed.split()))
+    text = _POWER.sub(_as_typed, _MINUS.sub("-", " ".join(typed.split())))
     refused = _refused(node, text)
     if refused:
         raise UserError(f"{echo(typed)} {refused}")
@@ -55,6 +62,10 @@ def read_claimed(node: Node, typed: str, unit: str) -> Typed:
             f"{node.symbol}: {echo(whole)} has a unit, and this line has none; write {counted[1]!r}"
         )
     return read_quantity(node.symbol, whole, node.unit)
+
+
+def _as_typed(power: re.Match[str]) -> str:
+    return f"e{power[1] or power[2].translate(_RAISED)}"
 
 
 def _refused(node: Node, text: str) -> str:
@@ -94,8 +105,15 @@ def _as_negative(_: Node, text: str) -> str:
     return f"may be a negative number or not; write '-{number}' or {number!r}"
 
 
+def _as_spacing(node: Node, text: str) -> str:
+    if _AT_SPACING.search(text) is None:
+        return ""
+    sample = f"200 {node.unit}".strip()
+    return f"names bars or their spacing; write the number alone, such as {sample!r}"
+
+
 def _as_none(node: Node, text: str) -> str:
-    if text.startswith("#"):
+    if _ERROR.match(text):
         return "is an error of a spreadsheet; write the value, or leave the cell empty"
     if any(sign.isdigit() for sign in text):
         return ""
@@ -104,7 +122,7 @@ def _as_none(node: Node, text: str) -> str:
 
 
 _REFUSALS: tuple[Callable[[Node, str], str], ...] = (
-    _as_groups, _as_date, _as_format, _as_percent, _as_negative, _as_none,
+    _as_groups, _as_date, _as_format, _as_percent, _as_negative, _as_spacing, _as_none,
 )  # fmt: skip
 
 
