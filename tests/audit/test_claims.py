@@ -369,6 +369,20 @@ def test_what_may_be_read_in_two_ways_is_refused(
     assert said in fault
 
 
+def test_a_label_that_may_have_lost_its_last_zero_needs_its_symbol(tmp_path: Path) -> None:
+    """A spreadsheet turns the label 1.10 into the number 1.1, which is another line."""
+    given = {f"x_{n}": f"{n} mm" for n in range(1, 11)}
+    graph = Graph(sheet_of({"a = x_1 + x_10": "mm"}, given).close())
+    assert (graph["given/x_1"].label, graph["given/x_10"].label) == ("1.1", "1.10")
+    (said,) = faults(graph, tmp_path, "label,claimed\n1.1,10 mm\n1.2,2 mm\n")
+    assert "row 2, label: '1.1' may be 1.10, of which a spreadsheet makes 1.1" in said
+    assert "write the symbol beside it, 'x_1' or 'x_10', or the id" in said
+    (claim,) = read(graph, tmp_path, "label,symbol,claimed\n1.1,x_1,1 mm\n")
+    assert claim.id == "given/x_1"
+    (claim,) = read(graph, tmp_path, "label,claimed\n1.10,10 mm\n")
+    assert claim.id == "given/x_10"
+
+
 def test_a_label_that_became_a_date_is_named(graph: Graph, tmp_path: Path) -> None:
     (fault,) = faults(graph, tmp_path, "label,claimed\n02-Jan,539 mm\n")
     assert "a spreadsheet made a date of it, so type it again" in fault

@@ -10,6 +10,9 @@ from pathlib import Path
 
 import pytest
 from openpyxl import Workbook, load_workbook
+from openpyxl.cell.rich_text import CellRichText, TextBlock
+from openpyxl.cell.text import InlineFont
+from openpyxl.styles import Font
 from openpyxl.worksheet.formula import ArrayFormula
 
 from lineproof.audit.claims.tables import read_table, write_table
@@ -301,6 +304,64 @@ def test_a_number_reads_as_its_format_shows_it(
     book.worksheets[0]["B2"].number_format = shown
     book.save(path)
     assert read_table(path).rows[0].cells["claimed"] == read
+
+
+@pytest.mark.parametrize(
+    ("cell", "said"),
+    [
+        ((("10", ""), ("3", "superscript")), "'103': '3' in it is raised, a power of ten; write"),
+        ((("6.2×10", ""), ("-2", "superscript")), "write it such as '1e-2'"),
+        ((("62", ""), ("1", "strike"), ("0 mm", "")), "'6210 mm': '1' in it is struck out"),
+    ],
+)
+def test_digits_raised_or_struck_out_are_not_read_as_the_others(
+    tmp_path: Path, cell: tuple[tuple[str, str], ...], said: str
+) -> None:
+    fonts = {
+        "": InlineFont(), "strike": InlineFont(strike=True),
+        "superscript": InlineFont(vertAlign="superscript"),
+    }  # fmt: skip
+    text = CellRichText(*(TextBlock(fonts[form], part) for part, form in cell))
+    (fault,) = faults(workbook(tmp_path, [["id", "claimed"], ["a", text]]))
+    assert said in fault
+
+
+def test_a_raised_digit_of_a_unit_is_one(tmp_path: Path) -> None:
+    raised = TextBlock(InlineFont(vertAlign="superscript"), "2")
+    unit = CellRichText(TextBlock(InlineFont(), "mm"), raised)
+    path = workbook(tmp_path, [["id", "claimed", "unit"], ["a", 1200, unit]])
+    assert read_table(path).rows[0].cells["unit"] == "mm2"
+
+
+def test_a_cell_struck_out_is_refused(tmp_path: Path) -> None:
+    path = workbook(tmp_path, [["id", "claimed"], ["a", 600], ["b", 2]])
+    book = load_workbook(path)
+    book.worksheets[0]["B2"].font = Font(strike=True)
+    book.worksheets[0]["C2"].font = Font(strike=True)  # empty
+    book.save(path)
+    (fault,) = faults(path)
+    assert "B2 struck out; empty the cells that are not claimed" in fault
+
+
+def test_a_second_sheet_of_claims_is_not_passed_over(tmp_path: Path) -> None:
+    path = workbook(tmp_path, [list(row) for row in GOOD])
+    book = load_workbook(path)
+    for title, headings in (("Notes", ["by", "unit"]), ("Shear", ["Claimed", "ID"])):
+        book.create_sheet(title).append(headings)
+    book.save(path)
+    (fault,) = faults(path)
+    assert "sheets 'Sheet' and 'Shear' both hold a table; put all rows into one" in fault
+    book["Shear"].sheet_state = "hidden"
+    book.save(path)
+    assert len(read_table(path).rows) == 2
+
+
+def test_the_first_sheet_that_is_seen_is_read(tmp_path: Path) -> None:
+    path = workbook(tmp_path, [list(row) for row in GOOD])
+    book = load_workbook(path)
+    book.create_sheet("Lists", 0).sheet_state = "hidden"
+    book.save(path)
+    assert read_table(path).headings == ("id", "claimed", "unit")
 
 
 def test_a_pipe_is_refused_without_waiting_for_its_writer(tmp_path: Path) -> None:

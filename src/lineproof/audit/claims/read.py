@@ -136,6 +136,14 @@ class _Reader:
         # An id is no label, so it names its line there too; a label among the ids does not: a
         # spreadsheet makes 1.1 of 1.10.
         known = self.labels.get(text, text) if column == "label" else text
+        longer = self.graph.nodes.get(self.labels.get(f"{text}0", ""))
+        if known != text and longer is not None and not row.cells.get("symbol"):
+            self.faults.at(
+                row.number, column, f"{echo(text)} may be {text}0, of which a spreadsheet makes "
+                f"{text}; write the symbol beside it, {self.graph[known].symbol!r} or "
+                f"{longer.symbol!r}, or the id"
+            )  # fmt: skip
+            return None
         node = self.graph.nodes.get(known)
         if node is not None and not node.has_value:
             fault = f"{echo(text)} is a {node.kind} and has no value; claim the lines it compares"

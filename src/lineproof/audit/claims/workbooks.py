@@ -10,11 +10,13 @@ import zlib
 from collections.abc import Iterator, Sequence
 from typing import TYPE_CHECKING
 
+from lineproof.audit.claims.rich_text import rich_text_faults
 from lineproof.audit.claims.shown import shown_number
 from lineproof.errors import UserError
 
 if TYPE_CHECKING:
     from openpyxl.cell.cell import Cell
+    from openpyxl.worksheet.worksheet import Worksheet
 
 MOST_UNPACKED = 60_000_000
 MOST_RATIO = 200
@@ -24,6 +26,9 @@ SMALL_MEMBER = 1_000_000
 MOST_MEMBERS = 500
 _COLUMNS_READ = 64
 _ROWS_READ = 20_002
+_SHARED_HEADINGS = 2
+"""So many headings that two sheets share make the second a table like the first."""
+_MOST_TOLD = 8
 _OLD_FORMAT = b"\xd0\xcf\x11\xe0"
 _MERGED = re.compile(rb"<(?:\w+:)?mergeCell\s[^>]{0,80}?ref=[\"']([A-Z0-9:$]{1,30})[\"']")
 _ROW = re.compile(rb"<(?:\w{1,20}:)?row\s[^>]{0,400}?\br=[\"'](\d{1,9})[\"']")
@@ -37,10 +42,11 @@ _WIDTHS = {"id": 26, "label": 8, "place": 44, "symbol": 10, "title": 48, "claime
 
 
 def read_workbook(content: bytes, name: str) -> Iterator[list[str]]:
-    """Give the rows of a workbook's first sheet as text, as the cells show them.
+    """Give the rows of a workbook's first visible sheet as text, as the cells show them.
 
     A formula is given as its text, which begins with ``=``. Raises :class:`UserError` for macros,
-    merged cells, and for an archive that unpacks into more than a table needs.
+    merged cells, cells struck out, a second sheet with such a table, and for an archive that
+    unpacks into more than a table needs.
     """
     faults = _archive_faults(content, name)
     if faults:
@@ -49,8 +55,12 @@ def read_workbook(content: bytes, name: str) -> Iterator[list[str]]:
 
     try:
         book = load_workbook(io.BytesIO(content), read_only=True, data_only=False)
-        first = book.worksheets[0]
-        yield from _rows(first.iter_rows(max_row=_ROWS_READ, max_col=_COLUMNS_READ))
+        visible = [each for each in book.worksheets if each.sheet_state == "visible"]
+        first, *others = visible or book.worksheets
+        _refuse_second_table(first, others, name)
+        yield from _rows(first.iter_rows(max_row=_ROWS_READ, max_col=_COLUMNS_READ), name)
+    except UserError:
+        raise
     except Exception:  # noqa: BLE001 - a broken workbook raises whatever its reader meets
         raise UserError(
             f"{name}: cannot be read as a workbook; open it in a spreadsheet and save it again"
@@ -104,10 +114,13 @@ def _content_faults(
                 f"{name}: cells {found.decode()} are merged; split them, one value in each cell"
                 for found in _MERGED.findall(text)[:10]
             ]
+            faults += rich_text_faults(text, name)
             if _filled_below(text):
                 faults.append(
                     f"{name}: rows below {_ROWS_READ - 2} hold values, which are not read"
                 )
+        elif member.filename.lower().endswith("sharedstrings.xml"):
+            faults += rich_text_faults(text, name)
     return faults
 
 
@@ -125,9 +138,37 @@ def _declares(text: bytes) -> bool:
     return hides or b"<!DOCTYPE" in plain or b"<!ENTITY" in plain
 
 
-def _rows(rows: Iterator[tuple[Cell, ...]]) -> Iterator[list[str]]:
+def _refuse_second_table(first: Worksheet, others: Sequence[Worksheet], name: str) -> None:
+    """Refuse a workbook in which claims stand on two sheets, of which one would be passed over."""
+    headings = _first_row(first)
+    for other in others:
+        if len(headings & _first_row(other)) >= _SHARED_HEADINGS:
+            raise UserError(
+                f"{name}: sheets {first.title!r} and {other.title!r} both hold a table; put all "
+                "rows into one, or hide the sheet that is not meant"
+            )
+
+
+def _first_row(sheet: Worksheet) -> set[str]:
+    rows = sheet.iter_rows(max_row=1, max_col=_COLUMNS_READ, values_only=True)
+    return {str(each).strip().lower() for each in next(rows, ()) if each is not None}
+
+
+def _rows(rows: Iterator[tuple[Cell, ...]], name: str) -> Iterator[list[str]]:
+    struck: list[str] = []
     for row in rows:
         yield [_shown(cell) for cell in row]
+        struck += [
+            cell.coordinate for cell in row
+            if cell.value is not None and cell.has_style and cell.font.strike
+        ]  # fmt: skip
+    if struck:
+        shown = ", ".join(struck[:_MOST_TOLD])
+        more = f" and {len(struck) - _MOST_TOLD} more" if len(struck) > _MOST_TOLD else ""
+        raise UserError(
+            f"{name}: {shown}{more} struck out; empty the cells that are not claimed, or take the "
+            "line through them off"
+        )
 
 
 def _column(at: int) -> str:
