@@ -118,7 +118,7 @@ def whole() -> dict[str, Any]:
     ("change", "told"),
     [
         (lambda d: d["marks"][0].update(state="okay"), "mark 1: state: 'okay' is not known; write"),
-        (lambda d: d["marks"][1].pop("digest"), "mark 2: digest: a NoneType is no digest"),
+        (lambda d: d["marks"][1].pop("digest"), "mark 2: digest: nothing is no digest"),
         (lambda d: d["marks"][0].update(digest="XYZ"), "mark 1: digest: 'XYZ' is no digest"),
         (lambda d: d["marks"][0].update(at="yesterday"), "mark 1: at: 'yesterday' is no time"),
         (lambda d: d["marks"][0].update(at="2026-02-30T10:00:00Z"), "is no time; write such as"),

@@ -1,5 +1,6 @@
 from __future__ import annotations
 
+import errno
 import io
 import json
 import re
@@ -343,3 +344,19 @@ def test_lines_of_a_beam_that_ships_are_its_own(name: str) -> None:
     made = subprocess.run(command, capture_output=True, text=True, check=False)
     assert made.returncode == 0, made.stderr
     assert "analysis/M_2D" in made.stdout or "analysis/M_1D" in made.stdout
+
+
+def test_a_full_disk_behind_the_output_is_told(
+    beam_file: Path, capsys: Capture, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """As by ``lineproof lines beam.ipynb > list.txt``: the system's error names no file there."""
+
+    class Full(io.StringIO):
+        def flush(self) -> None:
+            raise OSError(errno.ENOSPC, "No space left on device")
+
+    monkeypatch.setattr(sys, "stdout", Full())
+    assert main(["lines", str(beam_file)]) == 2
+    assert capsys.readouterr().err == (
+        "what is printed here: cannot be reached (No space left on device)\n"
+    )

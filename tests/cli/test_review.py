@@ -165,6 +165,8 @@ def test_the_originator_is_refused(calc: Path, capsys: pytest.CaptureFixture[str
         (["--marks", "other.json"], "holds B1, but the review is of calc 'B9'"),
         (["--marks", "a.json", "b.json", "--sign", "X"], "2 files of marks; say with --merge OUT"),
         (["--on", "2026-12-02"], "--on is the day of a sign-off"),
+        (["--marks", "a.json", "--sign", " "], "--sign: no name; write who signs, as in --sign"),
+        (["--marks", "a.json", "--sign", ""], "--sign: no name; write who signs, as in --sign"),
     ],
 )
 def test_wrong_input_gets_a_sentence(

@@ -202,8 +202,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         return DONE
     except OSError as error:  # met before reading or writing: a name too long, a closed folder
-        place = f"{error.filename}: " if error.filename else ""
-        sys.stderr.write(f"{_visible(f'{place}cannot be reached ({error.strerror or error})')}\n")
+        place = error.filename or "what is printed here"  # a full disk behind > FILE
+        sys.stderr.write(f"{_visible(f'{place}: cannot be reached ({error.strerror or error})')}\n")
         return UserError.exit_code
     return int(code)
 

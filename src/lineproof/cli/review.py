@@ -41,9 +41,9 @@ def run(options: argparse.Namespace) -> int:
     review = made.review
     record = _record_of(review, records, options.calc)
     refuse_originators(review, record)
-    if options.sign:
+    if options.sign is not None:
         review = sign(review, record, options.sign, options.on or _today())
-    if options.merge or options.sign:
+    if options.merge or options.sign is not None:
         place = options.merge or files[0]
         write_all({place: review.to_text().encode()})
         sys.stdout.write(f"{printable(str(place))}\n")
@@ -59,9 +59,11 @@ def _check_places(options: argparse.Namespace, files: Sequence[Path]) -> None:
     out = options.merge
     if out is not None and out.exists() and out.resolve() not in [file.resolve() for file in files]:
         faults.add(f"{out}: exists and would be lost; name it behind --marks too, or give another")
+    if options.sign is not None and not options.sign.strip():
+        faults.add("--sign: no name; write who signs, as in --sign 'A. Checker'")
     if options.sign and out is None and len(files) > 1:
         faults.add(f"--sign: {len(files)} files of marks; say with --merge OUT where they go")
-    if options.on and not options.sign:
+    if options.on and options.sign is None:
         faults.add("--on is the day of a sign-off; give --sign NAME with it")
     faults.raise_if_any()
 

@@ -107,7 +107,7 @@ def shown(value: object) -> str:
     if isinstance(value, int | float | str) and not isinstance(value, bool):
         big = isinstance(value, int) and abs(value) > LARGEST_INTEGER
         return "a very large integer" if big else ascii(value)[:60]
-    return f"a {type(value).__name__}"
+    return "nothing" if value is None else f"a {type(value).__name__}"
 
 
 def is_number(value: object) -> bool:
