@@ -16,6 +16,7 @@ from pypdf.annotations import FreeText
 from pypdf.generic import (
     ArrayObject,
     DictionaryObject,
+    FloatObject,
     NameObject,
     TextStringObject,
 )
@@ -23,6 +24,7 @@ from tests.audit import verifying as by
 
 from lineproof.audit.verify import pdf as verify_pdf
 from lineproof.audit.verify.data import Alteration, Proof
+from lineproof.audit.verify.page import Document, Keys, Mark
 from lineproof.audit.verify.verification import Outcome, Source, Verification, Where, verify
 from lineproof.errors import UserError
 from lineproof.package import Package, to_pdf
@@ -64,6 +66,15 @@ def drawn(text: str, x: float, y: float) -> bytes:
     return (
         f"\nq 1 0 0 -1 {x} {y} cm/c0 cs 0 scn\nBT 0 Tr/f0 10 Tf 1 0 0 -1 0 0 Tm({shown})Tj\nET\nQ\n"
     ).encode()
+
+
+def numbers(*values: float) -> ArrayObject:
+    return ArrayObject([FloatObject(value) for value in values])
+
+
+def marks_of(content: bytes, page: int) -> list[Mark]:
+    """Return the marks of a page with their places."""
+    return Document(Keys()).marks(pypdf.PdfReader(io.BytesIO(content)).pages[page], page)
 
 
 # -- intact, and what the record cannot prove --------------------------------------------------
@@ -283,6 +294,37 @@ def test_pages_in_another_order_are_found() -> None:
     kids[2], kids[3] = kids[3], kids[2]
 
     assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
+
+
+@pytest.mark.parametrize("box", ["/CropBox", "/MediaBox"])
+def test_a_page_cut_so_that_lines_are_not_shown_is_found(box: str) -> None:
+    """Every mark is still in the file, and no reader shows those below the edge."""
+    made = by.writer(by.pdf())
+    label = next(mark for mark in marks_of(by.pdf(), WORKING) if mark.text == "2.2")
+    low = round(label.y + label.size)
+    made.pages[WORKING][NameObject(box)] = numbers(0, low, 612, 792)
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    (cut,) = found.alterations
+    assert (cut.page, cut.line) == (WORKING + 1, "2.2")
+    assert cut.what == f"the page is cut, only 612 by {792 - low} pt of it are shown"
+
+
+@pytest.mark.parametrize("box", [(0, 0, 400, 792), (100, 0, 612, 792), (0, 0, 612, 730)])
+def test_a_page_cut_at_its_sides_or_above_is_found(box: tuple[float, ...]) -> None:
+    made = by.writer(by.pdf())
+    made.pages[WORKING][NameObject("/CropBox")] = numbers(*box)
+    assert "the page is cut" in said(verify(by.written(made), "b.pdf"))
+
+
+@pytest.mark.parametrize("box", [(30, 20, 582, 780), (-10, -10, 700, 900)])
+def test_empty_margins_may_be_cut_off(box: tuple[float, ...]) -> None:
+    made = by.writer(by.pdf())
+    for page in made.pages:
+        page[NameObject("/CropBox")] = numbers(*box)
+    assert verify(by.written(made), "b.pdf").intact
 
 
 # -- handled by others -----------------------------------------------------------------------------

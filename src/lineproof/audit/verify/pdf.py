@@ -7,6 +7,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 from typing import Any
 
+from lineproof.audit.verify.cut import cut_pages
 from lineproof.audit.verify.data import Alteration, Outcome, Outside, Proof, Verification, Where
 from lineproof.audit.verify.file import END, File
 from lineproof.audit.verify.page import Document, Keys, Kind, Mark, Zone
@@ -265,10 +266,12 @@ class _Checking:
         fresh = File(printed)
         document = Document(self.keys)
         marks = [m for n, page in enumerate(fresh.pages) for m in document.marks(page, n)]
-        compared = compare_pages(
-            marks, own.marks, lines_of(own.sources), [page + 1 for page in own.pages]
-        )
+        lines = lines_of(own.sources)
+        compared = compare_pages(marks, own.marks, lines, [page + 1 for page in own.pages])
         self.alterations += compared.alterations
+        pages = [(page + 1, self.file.pages[page]) for page in own.pages]
+        width = float(fresh.pages[0].mediabox.width)
+        self.alterations += cut_pages(pages, own.marks, lines, width)
         if any(source.walk is None for source in own.sources):
             self.outside += compared.outside
         else:

@@ -50,14 +50,14 @@ def compare_pages(
     ``numbers`` are the pages of the file that belong to the package, counted from 1; the marks
     count their pages within the package.
     """
-    pages = _Pages(fresh, given, _Lines(lines), numbers)
+    pages = _Pages(fresh, given, Lines(lines), numbers)
     found = [*pages.texts(), *pages.heights(), *pages.named_pages(), *pages.drawn()]
     found += [*pages.running(), *pages.foreign()]
     found.sort(key=lambda altered: altered.page)
     return Compared(tuple(dict.fromkeys(found)), tuple(pages.outside), pages.alike)
 
 
-class _Lines:
+class Lines:
     """The lines of the records in the order of print."""
 
     def __init__(self, lines: Iterable[Line]) -> None:
@@ -89,12 +89,12 @@ class _Pages:
 
     fresh: Sequence[Mark]
     given: Sequence[Mark]
-    lines: _Lines
+    lines: Lines
     numbers: Sequence[int]
     outside: list[Outside] = field(default_factory=list)
 
     def __post_init__(self) -> None:
-        self.ours, self.theirs = _body(self.fresh), _body(self.given)
+        self.ours, self.theirs = body_of(self.fresh), body_of(self.given)
         self.line = self.lines.of(self.ours)
         self.gaps = gaps([m.key for m in self.ours], [m.key for m in self.theirs])
         missing = sum(gap.last - gap.first for gap in self.gaps)
@@ -262,7 +262,7 @@ class _Pages:
                 yield Alteration(Where.DRAWN, what, page=self._number(mark))
 
 
-def _body(marks: Sequence[Mark]) -> list[Mark]:
+def body_of(marks: Sequence[Mark]) -> list[Mark]:
     """Return texts and figures of the pages, without the dots that lead to a page number."""
     made: list[Mark] = []
     dots: list[Mark] = []
