@@ -57,6 +57,24 @@ def test_recheck_lists_the_lines_that_differ(
     assert path.read_bytes() == before
 
 
+@pytest.mark.parametrize("command", ["recheck", "issue"])
+def test_an_input_that_no_code_uses_is_refused(
+    unrun: Notebook, tmp_path: Path, capsys: Capture, command: str
+) -> None:
+    """Added to the inputs and not to the call, it would be passed over in silence."""
+    cell = next(c for c in unrun["cells"] if "parameters" in c["metadata"].get("tags", ()))
+    cell["source"] = "".join(cell["source"]) + '\nreactions_csv = "reactions.csv"'
+    path = tmp_path / "beam.ipynb"
+    path.write_text(json.dumps(unrun), encoding="utf-8")
+
+    assert main([command, str(path)]) == 2
+    assert capsys.readouterr().err == (
+        f"{path}: input reactions_csv is used nowhere, so it changes nothing; write "
+        "reactions_csv=reactions_csv into the call that takes it, or take the line out\n"
+    )
+    assert [file.name for file in tmp_path.iterdir()] == ["beam.ipynb"]
+
+
 def test_recheck_refuses_a_calc_never_run(unrun: Notebook, tmp_path: Path, capsys: Capture) -> None:
     path = tmp_path / "beam.ipynb"
     path.write_text(json.dumps(unrun))

@@ -20,6 +20,7 @@ from lineproof.notebook.read import (
     has_outputs,
     stale_cells,
 )
+from lineproof.notebook.unused import unused_inputs
 from lineproof.record import Record
 
 MOST_CHANGES = 25
@@ -82,10 +83,22 @@ def _load(path: Path, *, need_record: bool) -> Stored:
     data = load_notebook(path)
     cells = cells_of(data, str(path))
     check_parameters(cells, str(path))
+    _check_inputs_used(cells, str(path))
     record = None
     if has_outputs(cells) and need_record:
         record = calc_of(data, str(path), fresh=False).record
     return Stored(path, data, cells, record)
+
+
+def _check_inputs_used(cells: tuple[Cell, ...], name: str) -> None:
+    """Refuse inputs that change nothing, such as one added that the call does not name."""
+    faults = [
+        f"{name}: input {each} is used nowhere, so it changes nothing; write {each}={each} into "
+        "the call that takes it, or take the line out"
+        for each in unused_inputs(cells)
+    ]
+    if faults:
+        raise UserError(faults)
 
 
 def rerun_all(found: Iterable[Stored], progress: Progress) -> list[Rerun]:
