@@ -331,13 +331,26 @@ def test_empty_margins_may_be_cut_off(box: tuple[float, ...]) -> None:
 
 
 def test_a_comment_laid_over_a_page_is_told_and_alters_no_line() -> None:
+    """It stands below all print of the page, above its foot."""
     made = by.writer(by.pdf())
-    made.add_annotation(WORKING, FreeText(text="M = 999", rect=(100, 100, 200, 120)))
+    made.add_annotation(WORKING, FreeText(text="M = 999", rect=(100, 80, 200, 100)))
 
     found = verify(by.written(made), "b.pdf")
 
     assert found.outcome is Outcome.HANDLED
     assert "page 4: laid over by others: FreeText “M = 999”" in found.remarks
+
+
+def test_a_comment_laid_over_print_names_the_lines_below_it() -> None:
+    """An opaque one hides a number and may show another: whoever verifies looks at these lines."""
+    label = next(mark for mark in marks_of(by.pdf(), WORKING) if mark.text == "2.2")
+    low, high = label.y - 1, label.y + label.size
+    made = by.writer(by.pdf())
+    made.add_annotation(WORKING, FreeText(text="a = 30 mm", rect=(300, low, 560, high)))
+
+    (told,) = [each for each in verify(by.written(made), "b.pdf").remarks if "laid over" in each]
+
+    assert told == "page 4: laid over by others: FreeText “a = 30 mm”, over line 2.2"
 
 
 def signed(content: bytes) -> bytes:

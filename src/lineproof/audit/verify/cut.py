@@ -1,7 +1,8 @@
-"""Pages of a package of which a part is no longer shown, though every mark is still in the file.
+"""Print that is no longer seen as it was issued, though every mark is still in the file.
 
 A page of a PDF may say that only a part of it is to be shown. What lies outside is seen by no
-reader and printed by no printer: a check that fails could be hidden so.
+reader and printed by no printer: a check that fails could be hidden so. A comment may hide what it
+is laid over, and may as well be an honest one: its lines are named.
 """
 
 from __future__ import annotations
@@ -10,11 +11,9 @@ from collections.abc import Iterator, Sequence
 from typing import Any
 
 from lineproof.audit.verify.data import Alteration, Where
+from lineproof.audit.verify.file import Box
 from lineproof.audit.verify.page import Kind, Mark
 from lineproof.audit.verify.printed import Line, Lines, body_of
-
-Box = tuple[float, float, float, float]
-"""Left, low, right and high edge [pt]."""
 
 _SLACK = 1.0
 _ASCENT = 0.6
@@ -48,6 +47,24 @@ def cut_pages(
         size = f"{right - left:.0f} by {high - low:.0f} pt"
         what = f"the page is cut, only {size} of it are shown"
         yield Alteration(Where.DRAWN, what, calc, label, id_, number)
+
+
+def lines_under(
+    box: Box, place: int, marks: Sequence[Mark], lines: Sequence[Line]
+) -> tuple[str, ...]:
+    """Return the printed numbers of the lines that something laid over a page touches.
+
+    ``place`` is the page among those that the marks count. How far a text reaches to the right is
+    not known: one that begins left of the box and at its height is taken as touched.
+    """
+    body = body_of(marks)
+    _, low, right, high = box
+    touched = (
+        line[1]
+        for mark, line in zip(body, Lines(lines).of(body), strict=True)
+        if mark.page == place and mark.x < right and low < _top(mark) and mark.y < high
+    )
+    return tuple(dict.fromkeys(label for label in touched if label))
 
 
 def shown_box(page: Any) -> Box:

@@ -21,8 +21,19 @@ _HEAD, _TAIL = 1024, 4096
 _LETTER, _A4 = (612.0, 792.0), (595.28, 841.89)
 _LINK = "/Link"
 _FIRST_PAGES = 3
+Box = tuple[float, float, float, float]
+"""Left, low, right and high edge [pt]."""
 _DIGEST = re.compile(r"Record\s+([0-9a-f]{16})")
 _NUMBERED = re.compile(r"Page\s+\d+\s+of\s+\d+")
+
+
+def _rectangle(given: Any) -> Box:
+    """Return a rectangle of a PDF, whichever corners it gives; nowhere if it is none."""
+    try:
+        a, b, c, d = (float(each) for each in given.get_object())
+    except (AttributeError, TypeError, ValueError):
+        return (0.0, 0.0, 0.0, 0.0)
+    return min(a, c), min(b, d), max(a, c), max(b, d)
 
 
 def is_pdf(content: bytes) -> bool:
@@ -116,15 +127,16 @@ class File:
                 signed.append(str(named or entry.get("/T", "") or "no name given")[:60])
         return signed
 
-    def annotations(self, page: Any) -> list[str]:
-        """Name what others have laid over a page: comments, stamps, signatures that show."""
+    def annotations(self, page: Any) -> list[tuple[str, Box]]:
+        """Name what others have laid over a page, and where: comments, stamps, signatures."""
         found = []
         for reference in page.get("/Annots", None) or []:
             entry = reference.get_object()
             kind = str(entry.get("/Subtype", ""))
             if kind != _LINK or "/AP" in entry:
                 text = str(entry.get("/Contents", "") or "")[:60]
-                found.append(f"{kind.lstrip('/') or 'annotation'}{f' “{text}”' if text else ''}")
+                named = f"{kind.lstrip('/') or 'annotation'}{f' “{text}”' if text else ''}"
+                found.append((named, _rectangle(entry.get("/Rect"))))
         return found
 
     def digest_redrawn(self) -> str:

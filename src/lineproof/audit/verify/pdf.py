@@ -7,9 +7,9 @@ from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 from typing import Any
 
-from lineproof.audit.verify.cut import cut_pages
+from lineproof.audit.verify.cut import cut_pages, lines_under
 from lineproof.audit.verify.data import Alteration, Outcome, Outside, Proof, Verification, Where
-from lineproof.audit.verify.file import END, File
+from lineproof.audit.verify.file import END, Box, File
 from lineproof.audit.verify.page import Document, Keys, Kind, Mark, Zone
 from lineproof.audit.verify.printed import compare_pages
 from lineproof.audit.verify.record import (
@@ -31,6 +31,7 @@ ANOTHER_VERSION = (
     "most lines stand otherwise than they are printed here: if another version of lineproof "
     "printed this package, verify it with that version, or issue it again"
 )
+_MOST_LINES = 6
 _MARKED = b"/Subtype/Footer/Type/Pagination"
 
 
@@ -96,6 +97,18 @@ class _Own:
         """Return the numbers that the pages bear, and of how many pages they say to be."""
         heads = [m for m in self.marks if m.zone is Zone.RUNNING and m.number]
         return {m.number for m in heads}, {m.text.rpartition(" ")[2] for m in heads}
+
+
+def _over(owns: Sequence[_Own], page: int, box: Box) -> str:
+    """Name the lines that something laid over a page of the file touches; "" for none."""
+    own = next((own for own in owns if page in own.pages), None)
+    if own is None:
+        return ""
+    lines = lines_under(box, own.pages.index(page), own.marks, lines_of(own.sources))
+    if not lines:
+        return ""
+    more = f" and {len(lines) - _MOST_LINES} more" if len(lines) > _MOST_LINES else ""
+    return f", over line {', '.join(lines[:_MOST_LINES])}{more}"
 
 
 def _fits(page: _Own, home: _Own) -> bool:
@@ -291,7 +304,8 @@ class _Checking:
         for number, page in enumerate(self.file.pages):
             if owns and number not in mine:
                 continue
-            for told in self.file.annotations(page):
-                self.remarks.append(f"page {number + 1}: laid over by others: {told}")
+            for told, box in self.file.annotations(page):
+                over = _over(owns, number, box)
+                self.remarks.append(f"page {number + 1}: laid over by others: {told}{over}")
         if len(owns) > 1:
             self.remarks.append(f"{len(owns)} packages in one file")
