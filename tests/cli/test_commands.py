@@ -378,3 +378,10 @@ def test_a_full_disk_behind_the_output_is_told(
     assert capsys.readouterr().err == (
         "what is printed here: cannot be reached (No space left on device)\n"
     )
+
+
+def test_a_file_in_the_place_of_a_folder_is_named(tmp_path: Path) -> None:
+    (tmp_path / "report").write_text("notes")
+    with pytest.raises(UserError, match="a file stands in the place of the folder"):
+        write_all({tmp_path / "report" / "audit.pdf": b"new"})
+    assert (tmp_path / "report").read_text() == "notes"

@@ -103,6 +103,7 @@ class _Writing:
             folder.mkdir()
         except FileExistsError:
             if not folder.is_dir():  # else another issue has made it in this moment
-                raise
+                what = "a file stands in the place of the folder"
+                raise FileExistsError(17, what, str(folder)) from None
         else:
             self._folders.append(folder)
