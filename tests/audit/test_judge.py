@@ -9,7 +9,7 @@ from typing import Any
 import pytest
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
-from tests.audit.hand import beam, judged, sheet_of, typed
+from tests.audit.hand import GIVENS, LINES, beam, judged, sheet_of, typed
 from tests.beams.continuous import flow
 from tests.beams.gallery import EDGE, RECTANGULAR, record_of
 
@@ -289,6 +289,31 @@ def test_an_input_written_wrongly_while_all_was_worked_with_the_right_one(record
     assert found == {
         "given/f_y": Verdict.INPUT, "beam/a": Verdict.AGREES, "strength/M_r": Verdict.AGREES,
     }  # fmt: skip
+
+
+@pytest.mark.parametrize(
+    ("line", "text", "a"),
+    [
+        # a = 0.85 x 1200 x 400/(0.805 phi_c 30 x 400) = 42.236/phi_c
+        ("given/phi_c", "0.6", "70.4"),  # 42.236/0.60 = 70.39; A23.3-94 had 0.60
+        ("given/phi_c", "0.7", "60.3"),  # 42.236/0.70 = 60.34
+        # a = phi_s 1200 x 400/6279 = 76.445 phi_s
+        ("given/phi_s", "0.9", "68.8"),  # 76.445 x 0.9 = 68.80; ACI 318 has 0.9
+    ],
+)
+def test_an_input_is_no_rounding_of_another(record: Record, line: str, text: str, a: str) -> None:
+    """0.6 stands for 0.55 to 0.65 as a result; as an input it is what was worked with."""
+    said = judged(record, {line: text, "beam/a": a})
+    assert [each.verdict for each in said.values()] == [Verdict.INPUT, Verdict.CARRIED]
+
+
+def test_an_input_nearly_of_the_same_size_is_the_same_one(record: Record) -> None:
+    """A bar of 25.2 mm typed as 25 is 0.8 % off, one of 19.5 mm typed as 20 is 2.6 % off."""
+    givens = GIVENS | {"d_b": "25.2 mm"}
+    same = judged(sheet_of(LINES, givens).close(), {"given/d_b": "25"})
+    other = judged(record, {"given/d_b": "20"})
+    assert same["given/d_b"].verdict is Verdict.AGREES
+    assert other["given/d_b"].verdict is Verdict.INPUT
 
 
 def test_a_number_as_long_as_the_right_one_is_no_rounding() -> None:

@@ -18,7 +18,7 @@ from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
 from lineproof.audit.claims.rewritten import used_as_written, worked_rightly
 from lineproof.audit.claims.safe_side import errs_safely
 from lineproof.audit.claims.twins import twins_of
-from lineproof.audit.claims.worlds import Worlds, claimed_above, unmoved_lines
+from lineproof.audit.claims.worlds import Worlds, as_recorded, claimed_above, unmoved_lines
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.rank import reproduced
@@ -123,8 +123,7 @@ class _Judge:
     # -- the worlds ------------------------------------------------------------------------
 
     def _deviating(self) -> list[Claim]:
-        stored = self.graph.stored
-        return [c for c in self.claims.values() if not c.stands_for.holds(stored[c.id])]
+        return [c for c in self.claims.values() if not as_recorded(self.graph, c)]
 
     def _worlds(self) -> Worlds:
         deviating = self._deviating()
@@ -141,7 +140,7 @@ class _Judge:
         node, right = self.graph[claim.id], self.graph.stored[claim.id]
         if node.is_computed:
             return claimed_form(claim.id, claim.stands_for)
-        if not claim.stands_for.holds(right):
+        if not as_recorded(self.graph, claim):
             return Form(claim.value)  # an input is used as it was typed
         same = Interval(right, right).holds(claim.value)
         return Form(right) if same else claimed_form(claim.id, claim.stands_for)
@@ -165,7 +164,7 @@ class _Judge:
         right = self.graph.stored[node.id]
         point = Interval(right, right)
         made = Judged(node.id, Verdict.AGREES, claim, point, right)
-        if claim.stands_for.holds(right):
+        if as_recorded(self.graph, claim):
             return made
         other = self._other_way(node, claim)
         if other is not None:

@@ -9,6 +9,17 @@ from lineproof.audit.claims.propagate import World
 from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph, Node
 
+_SAME_INPUT = 0.01
+"""An input is worked with as it is typed: within its digits it is the same one where it differs by
+so little, as 25 mm for a bar of 25.2 mm; 0.6 is not 0.65 rounded, nor 8 m a span of 8.4 m."""
+
+
+def as_recorded(graph: Graph, claim: Claim) -> bool:
+    """Tell whether a claim is the recorded value, to its digits; an input also nearly in size."""
+    right = graph.stored[claim.id]
+    near = graph[claim.id].is_computed or abs(claim.value - right) <= _SAME_INPUT * abs(right)
+    return near and claim.stands_for.holds(right)
+
 
 @dataclass(frozen=True, slots=True)
 class Worlds:
@@ -36,7 +47,7 @@ def unmoved_lines(
     """
     found: dict[str, list[str]] = {}
     for claim in claims.values():
-        if graph[claim.id].is_computed or claim.stands_for.holds(graph.stored[claim.id]):
+        if graph[claim.id].is_computed or as_recorded(graph, claim):
             continue
         lines = [i for i in next_claimed(graph, claim.id, claims) if _is_moved(i, worlds)]
         follow = [i for i in lines if _follows(claims[i], worlds)]
