@@ -45,6 +45,38 @@ def test_an_origin_is_one_finding_with_the_lines_that_carry_it() -> None:
     assert finding.advice
 
 
+def test_what_was_written_wrongly_and_used_rightly_moves_no_check() -> None:
+    """d 593 for 539: M_r = 408 000 x (538.95 - 32.49) = 206.6 was worked with the right one.
+
+    With 593 it would be 228.7, a utilisation of 0.79; nobody has claimed that.
+    """
+    (finding,) = found(beam(), {"beam/d": "593", "strength/M_r": "206.6"})
+    assert finding.effects == ()
+    assert finding.severity is Severity.MINOR
+    assert "follows from what it should be: it was written wrongly and used rightly" in (
+        finding.advice
+    )
+    (used,) = found(beam(), {"beam/d": "593", "strength/M_r": "228.7"})
+    (effect,) = used.effects
+    assert effect.claimed == pytest.approx(180 / 228.7, rel=1e-3)
+    assert effect.right == pytest.approx(180 / 206.636, rel=1e-3)
+
+
+def test_a_demand_written_wrongly_stands_in_its_own_check() -> None:
+    """A_s 900 written, 1200 used for M_r; the check of A_s itself compares what is written."""
+    sheet = hand.sheet_of()
+    with sheet.part("checks", "Span 1: checks"):
+        sheet.given("A_smin", "657 mm2")
+        sheet.check("A_smin <= A_s", key="least", title="Minimum reinforcement")
+        sheet.check("M_f <= M_r", key="strength", title="Moment resistance")
+    (finding,) = found(sheet.close(), {"beam/A_s": "900", "beam/a": "65.0", "beam/M_r": "206.6"})
+    # 657/900 = 0.73, 657/1200 = 0.5475
+    (effect,) = finding.effects
+    assert effect.check == "checks/least"
+    assert effect.claimed == pytest.approx(657 / 900, rel=1e-3)
+    assert effect.right == pytest.approx(657 / 1200, rel=1e-3)
+
+
 def test_severity_goes_by_the_checks() -> None:
     """With w_f 60 M_f = 270 > 206.6 fails: a claim that makes it hold is critical."""
     sheet = hand.sheet_of(givens=hand.GIVENS | {"w_f": "60 kN/m"})

@@ -37,13 +37,17 @@ def findings_of(graph: Graph, judged: Sequence[Judged]) -> tuple[Finding, ...]:
         if each.claim is None or each.verdict not in FOUND:
             continue
         effects: tuple[Effect, ...] = ()
-        advice = _advice(graph, each)
+        advice, carriers = _advice(graph, each), carried.get(each.id, [])
         if len(found) < _MOST_EFFECTS:
-            changed = {each.id: each.claim.value}
+            rightly = _worked_rightly(graph, judged, each.id)
+            changed = {each.id: each.claim.value} | {i: graph.stored[i] for i in rightly}
             effects = effects_of(graph, changed)
-            said = (advice, "" if effects else _NO_CHECK, turned_sentence(graph, changed))
-            advice = " ".join(filter(None, said))
-        made = _finding(graph, each, each.claim, effects, carried.get(each.id, []))
+            turned = turned_sentence(graph, changed)
+            if rightly and not carriers:  # written wrongly: a check by itself may compare it so
+                effects = tuple(e for e in effects if each.id in graph[e.check].args.values())
+                turned, advice = "", f"{advice} {_written_wrongly(graph, rightly)}"
+            advice = " ".join(filter(None, (advice, "" if effects else _NO_CHECK, turned)))
+        made = _finding(graph, each, each.claim, effects, carriers)
         found.append(replace(made, advice=advice))
     return tuple(sorted(found, key=importance))
 
@@ -74,6 +78,32 @@ def _carried(judged: Sequence[Judged]) -> dict[str, list[str]]:
             for cause in each.causes:
                 found.setdefault(cause, []).append(each.id)
     return found
+
+
+def _worked_rightly(graph: Graph, judged: Sequence[Judged], entry_id: str) -> list[str]:
+    """Return the claimed lines below a wrong one that follow from what it should be, not from it.
+
+    What the wrong value would do to them it has not done: the claim shows it.
+    """
+    below = set(graph.below([entry_id]))
+    return [
+        each.id
+        for each in judged
+        if each.id in below
+        and each.claim is not None
+        and each.verdict in (Verdict.AGREES, Verdict.CARRIED)
+        and entry_id not in each.causes
+        and not each.claim.stands_for.meets(each.follows)
+    ]
+
+
+def _written_wrongly(graph: Graph, rightly: Sequence[str]) -> str:
+    """Say that a wrong value was written down only, as what was worked from it is right."""
+    first, more = graph[rightly[0]], len(rightly) - 1
+    named = f"{first.symbol} ({first.label})"
+    named += f" and {counted(more, 'more claimed line')}" if more else ""
+    follows = "follow" if more else "follows"
+    return f"{named} {follows} from what it should be: it was written wrongly and used rightly."
 
 
 def _finding(
