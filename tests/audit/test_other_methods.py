@@ -53,6 +53,20 @@ def test_the_simplified_method_beside_the_general_one() -> None:
     assert said_of(record, f"{part}/theta", "35 deg")[0] is Verdict.OTHER_METHOD
 
 
+def test_a_factor_of_one_method_with_that_of_the_other_is_a_slip() -> None:
+    """theta of 11.3.6.3 goes with its beta 0.18, not with 0.40/(1 + 1500 eps_x)."""
+    record, part = spans(), "shear-1-left"
+    beta, theta = value(record, f"{part}/beta"), value(record, f"{part}/theta")
+    assert beta == pytest.approx(0.40 / (1 + 1500 * value(record, f"{part}/eps_x")))
+    mixed = judged(record, {f"{part}/beta": f"{beta:.3f}", f"{part}/theta": "35 deg"})
+    assert mixed[f"{part}/beta"].verdict is Verdict.AGREES
+    assert mixed[f"{part}/theta"].verdict is Verdict.ORIGIN
+    turned = judged(record, {f"{part}/beta": "0.18", f"{part}/theta": f"{theta:.1f} deg"})
+    assert turned[f"{part}/beta"].verdict is Verdict.ORIGIN
+    both = judged(record, {f"{part}/beta": "0.18", f"{part}/theta": "35 deg"})
+    assert {each.verdict for each in both.values()} == {Verdict.OTHER_METHOD}
+
+
 def test_a_slip_in_shear_is_no_other_method() -> None:
     """One leg in place of two halves V_s: 129 + 71 by the simplified method, 143 + 74 by ours."""
     record = spans()

@@ -124,7 +124,7 @@ def _shear(bench: Bench, node: Node) -> Iterator[Other]:
     pairs = _recorded_pairs(bench, node)
     swapped = {mine: bench.world.used[other] for mine, other in pairs.items()}
     swapped = swapped or _simplified(bench, node)
-    if not swapped:
+    if not swapped or _is_mixed(bench, node, swapped):
         return
     part = bench.graph[next(iter(swapped))].part
     factor = bench.graph.nodes.get(f"{part}/beta")
@@ -132,6 +132,20 @@ def _shear(bench: Bench, node: Node) -> Iterator[Other]:
     name = "general method of 11.3.6.4" if general else "simplified method of 11.3.6.3"
     sentence = f"follows by the {name}, which the standard allows as well"
     yield from bench.by(node, swapped, sentence, pairs.values())
+
+
+def _is_mixed(bench: Bench, node: Node, swapped: Mapping[str, Form]) -> bool:
+    """Tell whether a line beside one is claimed by the recorded method: both factors go together.
+
+    What rests on the line shows nothing of it; what lies above it is looked at by the bench.
+    """
+    beside = set(swapped) - {node.id} - set(bench.graph.below([node.id]))
+    for claim in (bench.claims[i] for i in beside if i in bench.claims):
+        mine = bench.world.follows.get(claim.id, Form(bench.graph.stored[claim.id]))
+        by_recorded = claim.stands_for.meets(mine.interval)
+        if by_recorded and not claim.stands_for.overlaps(swapped[claim.id].interval):
+            return True
+    return False
 
 
 def _parts_above(bench: Bench, node: Node, *symbols: str) -> Iterator[str]:
