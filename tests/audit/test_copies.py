@@ -39,6 +39,18 @@ def test_one_slip_in_two_rows_is_no_copy() -> None:
     assert COPIED in second.slips[-1].sentence  # the row before is told, after what explains it
 
 
+def test_what_is_worked_from_the_claim_does_not_explain_it() -> None:
+    """d_s = 620 - 537.4 = 82.6 comes of the claim: 620 - 30 - 11.3 - 82.6/2 = 537.4 is a circle."""
+    sheet = _sheet()
+    with sheet.part("sag-3", "Flexure, span 3"):
+        sheet.line(DEPTH, unit="mm")
+        sheet.line("d_s = h - d", unit="mm")
+    claims = {"sag-3/d": "537.4", "sag-3/d_s": "82.6"}
+    found = judged(sheet.close(), claims, find_slips)["sag-3/d"]
+    assert found.verdict is Verdict.ORIGIN
+    assert not any("d_s" in slip.sentence for slip in found.slips)
+
+
 def test_a_row_without_fault_may_have_been_copied() -> None:
     """With 19.5 + 9.75 in span 3, d = 620 - 30 - 11.3 - 29.25 = 549.45; span 2 claimed as that."""
     sheet = _sheet()

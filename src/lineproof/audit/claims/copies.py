@@ -13,6 +13,19 @@ Told = Callable[[str], bool]
 """Tells something of a line, by its id."""
 
 
+def without_results(slips: Sequence[Slip], claim: Claim, is_result: Told) -> tuple[Slip, ...]:
+    """Return slips without those that take a value worked from the claim itself: 82 = h - d."""
+    kept = [
+        (slip, [at for at, cause in enumerate(slip.causes) if not is_result(cause.took)])
+        for slip in slips
+    ]
+    return tuple(
+        slip if len(at) == len(slip.causes) else _with(slip, at, claim)
+        for slip, at in kept
+        if at or not slip.causes
+    )
+
+
 def without_circles(
     slips: Sequence[Slip], claim: Claim, is_wrong: Told, is_later: Told
 ) -> tuple[Slip, ...]:

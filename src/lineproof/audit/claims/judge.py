@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
-from lineproof.audit.claims.copies import stands_alone, without_circles
+from lineproof.audit.claims.copies import stands_alone, without_circles, without_results
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
@@ -21,7 +20,7 @@ from lineproof.audit.claims.twins import twins_of
 from lineproof.audit.claims.worlds import Worlds, as_recorded, claimed_above, unmoved_lines
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.slips.rank import reproduced
+from lineproof.audit.slips.rank import reproduced, without_underscore
 from lineproof.record.entry import DECISION
 from lineproof.typeset.values import told
 
@@ -68,15 +67,6 @@ def _as_typed(judged: Judged, typed: Mapping[str, str]) -> Judged:
     if claim is None or claim.typed == typed[claim.id]:
         return judged
     return replace(judged, claim=replace(claim, typed=typed[claim.id]))
-
-
-_LAMBDA = re.compile(r"\blambda_(?!\w)")
-"""The name of lambda in formulas, which are read as Python; a checker writes no underscore."""
-
-
-def _without_underscore(slip: Slip) -> Slip:
-    causes = tuple(replace(c, words=_LAMBDA.sub("lambda", c.words)) for c in slip.causes)
-    return replace(slip, sentence=_LAMBDA.sub("lambda", slip.sentence), causes=causes)
 
 
 class _Judge:
@@ -346,10 +336,15 @@ class _Judge:
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         if self.find is None:
             return ()
-        slips = self.find(self.graph, node.id, self.used, claim, self.typed)
+        below, stored = set(self.graph.below([node.id])), self.graph.stored
+        slips = without_results(
+            self.find(self.graph, node.id, self.used, claim, self.typed),
+            claim,
+            lambda i: i in below and not self.used[i].holds(stored[i]),
+        )
         later = self.order[node.id].__lt__
         told = without_circles(slips, claim, self._is_alone, lambda i: later(self.order[i]))
-        return tuple(map(_without_underscore, told))
+        return tuple(map(without_underscore, told))
 
     def _is_alone(self, entry_id: str) -> bool:
         """Tell whether a claimed line follows from nothing, nor is a rounding of it."""

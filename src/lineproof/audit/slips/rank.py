@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 import math
+import re
 from collections import Counter
 from collections.abc import Iterable, Sequence
+from dataclasses import replace
 from typing import NamedTuple
 
 from lineproof.audit.data import Cause, Claim, Slip
@@ -25,6 +27,8 @@ AGAIN = 0.5
 BESIDE = 0.1
 """A second cause of the same value is told if it is so likely beside the first."""
 _SAME = 1e-9
+_LAMBDA = re.compile(r"\blambda_(?!\w)")
+"""The name of lambda in formulas, which are read as Python; a checker writes no underscore."""
 
 
 class Fit(NamedTuple):
@@ -127,6 +131,12 @@ def _varied(groups: list[Group]) -> list[Group]:
 
 def _equal(first: float, second: float) -> bool:
     return abs(first - second) <= _SAME * max(abs(first), abs(second))
+
+
+def without_underscore(slip: Slip) -> Slip:
+    """Return a slip that says lambda as a checker writes it."""
+    causes = tuple(replace(c, words=_LAMBDA.sub("lambda", c.words)) for c in slip.causes)
+    return replace(slip, sentence=_LAMBDA.sub("lambda", slip.sentence), causes=causes)
 
 
 def reproduced(cause: Cause, value: float, claim: Claim) -> str:
