@@ -9,7 +9,9 @@ import pytest
 
 from lineproof.audit.data import Slip
 from lineproof.audit.graph import Graph
+from lineproof.audit.slips.constants import of_constant
 from lineproof.audit.slips.search import find_slips
+from lineproof.formula import formula
 from lineproof.sheet import Sheet
 
 from .hand import typed
@@ -52,6 +54,62 @@ def slips(part: str, line: str, unit: str, text: str) -> tuple[Slip, ...]:
 )
 def test_a_short_cut_is_named_first(part: str, line: str, unit: str, text: str, says: str) -> None:
     assert says in slips(part, line, unit, text)[0].sentence
+
+
+SECTION = {
+    "b_w": "350 mm", "h": "650 mm", "b_f": "3600 mm", "h_f": "150 mm", "f_r": "3.286 MPa",
+    "d": "596 mm", "f_c": "30 MPa", "f_y": "400 MPa", "phi_c": "0.65", "beta": "0.236",
+    "lambda_": "1", "d_v": "536 mm", "zeta_s": "3", "delta_sus": "13.7 mm", "delta_Lr": "2.5 mm",
+    "delta_DL": "16.2 mm", "y_b": "495 mm", "w_D1": "22.6 kN/m", "w_L1": "8.64 kN/m",
+}  # fmt: skip
+I_G = (
+    "I_g = b_w*h**3/12 + b_w*h*(y_b - h/2)**2 + (b_f - b_w)*h_f**3/12"
+    " + (b_f - b_w)*h_f*(h - h_f/2 - y_b)**2"
+)
+
+
+@pytest.mark.parametrize(
+    ("lines", "unit", "text", "says"),
+    [
+        # 350 x 650^3/12 = 8.0099e9; the T section has 18.6e9
+        ([I_G], "mm4", "8010000000", "b_w*h**3/12, the web alone"),
+        # and 3250 x 150^3/12 = 0.9141e9 more, 8.9240e9
+        ([I_G], "mm4", "8924000000", "about their own axes"),
+        # 3.286 x 350 x 650^2/6 = 80.99 kN.m; the T section has 3.286 x 18.6e9/495 = 123.6
+        ([I_G, "M_cr = f_r*I_g/y_b"], "kN.m", "80.99", "f_r*b_w*h**2/6, the web alone"),
+        # 0.2 x 0.65 x sqrt(30) x 350 x 596 = 148.5 kN; with 0.236 and 536 it is 157.6
+        (["V_c = phi_c*lambda_*beta*1.0*sqrt(f_c)*b_w*d_v", "d_x = 2*d"], "kN", "148.5",
+         "A23.3-94, simplified method"),
+        # 3 x 16.2 = 48.6; right is 3 x 13.7 + 2.5 = 43.6, which one digit tells from it
+        (["delta_t = zeta_s*delta_sus + delta_Lr", "delta_L = delta_DL - delta_sus"], "mm",
+         "48.6", "taken as sustained"),
+        # 1.4 x 22.6 = 31.64; right is 1.25 x 22.6 + 1.5 x 8.64 = 41.21
+        (["w_f = 1.25*w_D1 + 1.5*w_L1"], "kN/m", "31.64", "dead load alone, case 1"),
+    ],
+)  # fmt: skip
+def test_another_rule_for_the_lines_own_is_named_first(
+    lines: list[str], unit: str, text: str, says: str
+) -> None:
+    sheet = Sheet("H4", "Other rules")
+    with sheet.part("given", "Given"):
+        for name, value in SECTION.items():
+            sheet.given(name, value)
+    units = {"I_g": "mm4", "d_x": "mm", "delta_L": "mm"}
+    with sheet.part("beam", "Span 1"):
+        for line in lines:
+            own = units.get(line.partition(" ")[0], unit)
+            numbers = {"1.0": "MPa^0.5"} if "1.0*sqrt" in line else {}
+            sheet.line(formula(line, unit=own, numbers=numbers, title="own"))
+    graph = Graph(sheet.close())
+    wanted = {"kN.m": "M_cr", "kN": "V_c", "mm": "delta_t", "kN/m": "w_f", "mm4": "I_g"}
+    asked = f"beam/{wanted[unit]}"
+    assert says in find_slips(graph, asked, {}, typed(graph, asked, text))[0].sentence
+
+
+def test_the_modulus_of_rupture_in_psi() -> None:
+    """7.5 sqrt(f'c) in psi; 1 psi = 0.006894757 MPa, so that it is 7.5 x 0.0830347 = 0.62276."""
+    others = of_constant("f_r", "0.6", is_load=False)
+    assert any(other.value == pytest.approx(0.62276, abs=5e-5) for other in others)
 
 
 def test_steel_by_a_lever_arm_of_nine_tenths() -> None:

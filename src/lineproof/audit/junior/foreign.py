@@ -42,18 +42,23 @@ _ROWS = (
 
 
 @cache
-def _rules() -> dict[str, tuple[tuple[Tree, str], ...]]:
-    found: dict[str, tuple[tuple[Tree, str], ...]] = {}
+def _rules() -> dict[str, tuple[tuple[Tree, str, str], ...]]:
+    found: dict[str, tuple[tuple[Tree, str, str], ...]] = {}
     for text, whose in _ROWS:
         symbol, tree = parse_line(text)
-        found[symbol] = (*found.get(symbol, ()), (tree, whose))
+        found[symbol] = (*found.get(symbol, ()), (tree, text, whose))
     return found
+
+
+def rules_of(symbol: str) -> tuple[tuple[Tree, str, str], ...]:
+    """Return the rules for a symbol: tree, text, and whose it is."""
+    return _rules().get(symbol, ())
 
 
 def foreign_rule(symbol: str, tree: Tree) -> str:
     """Return whose rule a formula is, if it is one of those known here, else ""."""
     names = set(names_of(tree))
-    for rule, whose in _rules().get(symbol, ()):
+    for rule, _, whose in rules_of(symbol):
         if names and set(names_of(rule)) == names:
             points = points_for(names)
             if equal(sampled(tree, points), sampled(rule, points)):

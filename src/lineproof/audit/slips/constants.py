@@ -32,7 +32,9 @@ IN_FORMULAS: dict[tuple[str, str], tuple[Other, ...]] = {
     ("E_c", "4500"): _others(
         (4700, _ACI), (4733, "57 000 in psi, ACI 318"), (5000, _84), (4750, "rounded")
     ),
-    ("f_r", "0.6"): _others((0.62, _ACI), (0.3, _HALF), (0.7, "older ACI 318M")),
+    ("f_r", "0.6"): _others(
+        (0.62, _ACI), (0.6228, "7.5 in psi, ACI 318"), (0.3, _HALF), (0.7, "older ACI 318M")
+    ),
     ("f_rd", "0.5"): _others((1.0, "A23.3-04")),
     ("alpha_1", "0.85"): _others((0.8, "rounded")),
     ("alpha_1", "0.0015"): _others((0.0025, "the line of beta_1")),
@@ -96,6 +98,7 @@ _LOADS = {
 LOAD_PAIRS = (
     (1.2, 1.6, _ACI), (1.4, 1.7, "ACI 318 before 2002"), (1.35, 1.5, _EC),
     (1.5, 1.25, "the two exchanged"), (1.4, 1.4, "one factor for the whole"),
+    (1.4, 0.0, "dead load alone, case 1"), (1.0, 1.5, "the dead load not factored"),
 )  # fmt: skip
 """Factors of dead and of live load that are used together elsewhere."""
 

@@ -55,6 +55,8 @@ FAMILIES: dict[str, Family] = {
     "simple span": Family("simple span for continuous", 2.0, usual=True),
     "coefficient": Family("coefficient in place of the analysis", 0.4),
     "thumb": Family("rule of thumb", 0.8),
+    "web": Family("web alone for the section", 1.0, usual=True),
+    "rule": Family("rule of another edition or standard", 0.8, usual=True),
     "centreline": Family("centreline for face", 2.0, usual=True),
     # constants
     "edition": Family("constant of another edition or standard", 1.0, usual=True),

@@ -168,6 +168,8 @@ def _miscopied(line: Line, claim: Claim) -> Iterator[Edit]:
     for family, ways in (("swapped result", swapped), ("mistyped result", changed)):
         near = []
         for meant in ways(number):
+            if meant.lstrip("-")[:1] == "0" != number.lstrip("-")[:1]:
+                continue  # nobody writes 0800
             interval = read_from(meant).times(factor)
             if interval.low - half <= value <= interval.high + half:
                 near.append((abs(value - interval.middle), meant, value - interval.middle))
