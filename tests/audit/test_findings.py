@@ -62,6 +62,16 @@ def test_what_was_written_wrongly_and_used_rightly_moves_no_check() -> None:
     assert effect.right == pytest.approx(180 / 206.636, rel=1e-3)
 
 
+def test_a_digit_mistyped_may_be_chance_unless_it_was_used_rightly() -> None:
+    """M_f 188 for 180, and nothing shows what was used; d 593 with the M_r of 539 shows it."""
+    (alone,) = found(beam(), {"strength/M_f": "188"})
+    assert "the result 180 written as 188" in alone.advice
+    assert "may fit by chance" in alone.advice
+    (shown,) = found(beam(), {"beam/d": "593", "strength/M_r": "206.6"})
+    assert "the result 539 written as 593" in shown.advice
+    assert "may fit by chance" not in shown.advice
+
+
 def test_a_demand_written_wrongly_stands_in_its_own_check() -> None:
     """A_s 900 written, 1200 used for M_r; the check of A_s itself compares what is written."""
     sheet = hand.sheet_of()

@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Mapping, Sequence
 
 import pytest
+from tests.audit import hand
 from tests.audit.slip_sheet import beam, claim_of, slips, typed
 from tests.beams.continuous.flow import analysed, record_so_far
 
@@ -13,6 +15,7 @@ from lineproof.audit.graph import Graph
 from lineproof.audit.slips.digits import changed, swapped
 from lineproof.audit.slips.rank import MOST
 from lineproof.audit.slips.search import find_slips, none_fits, searching
+from lineproof.formula import formula
 from lineproof.sheet import Sheet
 
 T = 0.85 * 2000 * 400
@@ -245,3 +248,82 @@ def test_digits_of_the_pen() -> None:
     assert len(list(changed("350"))) == 27
     assert len(list(changed("12300"))) == 27  # the zeros hold the place
     assert "8.6" in set(changed("7.6"))
+
+
+def _said(
+    givens: Mapping[str, str], lines: Sequence[str], units: Mapping[str, str], text: str
+) -> list[str]:
+    """Return what is said of a number typed for the last of some lines, the likeliest first."""
+    sheet = Sheet("H5", "Lines")
+    with sheet.part("given", "Given"):
+        for symbol, value in givens.items():
+            sheet.given(symbol, value)
+    with sheet.part("hog-2-left", "Support 2, left face"):
+        for line in lines:
+            made = formula(line, unit=units[line.partition(" ")[0]], system="kN-m", title="own")
+            sheet.line(made)
+    graph = Graph(sheet.close())
+    asked = f"hog-2-left/{lines[-1].partition(' ')[0]}"
+    claimed = {i: "" for i in graph.nodes if i.startswith("given/")}
+    found = find_slips(graph, asked, {}, hand.typed(graph, asked, text), claimed)
+    return [slip.sentence for slip in found]
+
+
+def test_the_moment_of_a_simple_span_for_that_at_a_support() -> None:
+    """w_f = 1.25 x 20 = 25: 25 x 7^2/8 = 153.1; right is 1.25 x 20 x 7^2/10 = 122.5.
+
+    The moment rests on the dead load alone; the factored load stands beside it.
+    """
+    said = _said(
+        {"w_D": "20 kN/m", "l_1": "7 m"},
+        ["w_f = 1.25*w_D", "M_2D = -w_D*l_1**2/10", "M_sn = 1.25*M_2D"],
+        {"w_f": "kN/m", "M_2D": "kN.m", "M_sn": "kN.m"},
+        "-153.1",
+    )
+    assert "w_f*l_1**2/8 (simple span)" in said[0]
+
+
+def test_a_term_that_units_make_nothing_is_told_as_left_out() -> None:
+    """12.25 x 6.55/2 = 40.12 without x_n: kN less mm is no bracket that somebody forgot."""
+    said = _said(
+        {"t_f": "12.25 kN.m/m", "l_n": "6.55 m", "x_n": "494 mm"},
+        ["T_f = t_f*(l_n/2 - x_n)"],
+        {"T_f": "kN.m"},
+        "40.12",
+    )
+    assert "the term x_n" in said[0]
+    assert not any("brackets" in sentence for sentence in said)
+
+
+def test_a_term_divided_to_nothing_is_told_as_left_out() -> None:
+    """1.25 x 178 + 1.5 x 34.9 = 274.9; 1.5/34.9 kN is next to nothing, and nobody does that."""
+    said = _said(
+        {"R_D": "178 kN", "R_L1": "34.9 kN", "R_L2": "30.2 kN"},
+        ["R_f = 1.25*R_D + 1.5*R_L1 + 1.5*R_L2"],
+        {"R_f": "kN"},
+        "274.9",
+    )
+    assert any("the term 1.5*R_L2 left out" in sentence for sentence in said)
+    assert not any("fraction bar" in sentence for sentence in said)
+
+
+def test_the_result_of_another_place_is_not_the_argument_of_this_one() -> None:
+    """b_f = 400 + 2 x 583 = 1566, the overhang twice; so is 983 + 583 with b_f of span 2."""
+    sheet = Sheet("H6", "L sections")
+    with sheet.part("given", "Given"):
+        sheet.given("b_w", "400 mm")
+        sheet.given("b_o", "583 mm")
+    for span in (1, 2):
+        with sheet.part(f"span-{span}", f"Span {span}"):
+            sheet.line("b_f = b_w + b_o", unit="mm")
+    graph = Graph(sheet.close())
+    claim = hand.typed(graph, "span-1/b_f", "1566")
+    found = find_slips(graph, "span-1/b_f", {}, claim, dict.fromkeys(graph.nodes, ""))
+    assert "the term b_o (1.2, ) counted twice" in found[0].sentence.partition(". The")[0]
+
+
+def test_nobody_writes_a_zero_in_front() -> None:
+    """A_s = 4 x 200 = 800, claimed as 1800: not 0800 with its first digit mistyped."""
+    said = _said({"n_b": "4", "A_b": "200 mm2"}, ["A_s = n_b*A_b"], {"A_s": "mm2"}, "1800")
+    assert said
+    assert not any("0800" in sentence for sentence in said)

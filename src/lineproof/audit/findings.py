@@ -22,6 +22,8 @@ _MOST_EFFECTS = 300
 """So many findings get their effects; more of them say that the claims are of another beam."""
 _BY_CHANCE = 0.03
 """A slip that is no mistake known by name, and less likely than this, fits many a number."""
+_BY_DIGITS = "mistyped digit"
+"""One of five numbers near another is that number with one digit changed: many a slip gives one."""
 _CHANCE = "It may fit by chance: see whether two slips were made in this line."
 _SMALL = 0.02
 """A check that the right value uses up more by so little is no major matter while it holds."""
@@ -37,9 +39,10 @@ def findings_of(graph: Graph, judged: Sequence[Judged]) -> tuple[Finding, ...]:
         if each.claim is None or each.verdict not in FOUND:
             continue
         effects: tuple[Effect, ...] = ()
-        advice, carriers = _advice(graph, each), carried.get(each.id, [])
-        if len(found) < _MOST_EFFECTS:
-            rightly = _worked_rightly(graph, judged, each.id)
+        few, carriers = len(found) < _MOST_EFFECTS, carried.get(each.id, [])
+        rightly = _worked_rightly(graph, judged, each.id) if few else []
+        advice = _advice(graph, each, rightly)
+        if few:
             changed = {each.id: each.claim.value} | {i: graph.stored[i] for i in rightly}
             effects = effects_of(graph, changed)
             turned = turned_sentence(graph, changed)
@@ -147,13 +150,15 @@ def _change(effect: Effect) -> float:
     return effect.right - effect.claimed
 
 
-def _advice(graph: Graph, judged: Judged) -> str:
+def _advice(graph: Graph, judged: Judged, rightly: Sequence[str]) -> str:
+    """Say what is behind a finding; ``rightly`` are lines that show it to be written wrongly."""
     if judged.verdict is Verdict.DOUBTFUL:
         return "Doubtful, not proved an error: ask which of the two was done."
     if judged.slips:
         likeliest = judged.slips[0]
         known = any(cause.usual for cause in likeliest.causes)
-        chance = f" {_CHANCE}" if likeliest.likely < _BY_CHANCE and not known else ""
+        far = likeliest.likely < _BY_CHANCE or likeliest.kind == _BY_DIGITS
+        chance = f" {_CHANCE}" if far and not known and not rightly else ""
         return f"{begun(likeliest.sentence)}{chance}"
     if judged.verdict is Verdict.ORIGIN:
         return none_fits(graph, judged.id)

@@ -20,6 +20,8 @@ TOP = (0,)
 IN_METRES = {"mm": 1e3, "mm2": 1e6, "mm4": 1e12, "N": 1e3, "N.mm": 1e6, "MPa": 1e-3}
 """What one m, m2, m4, kN, kN.m and kPa are in internal units."""
 SUM, PRODUCT = ("+", "-"), ("*", "/")
+NOTHING = 1e-3
+"""Part of a term that is nothing beside it: what is left of kN.m once kN are divided by mm."""
 
 
 class Edit(NamedTuple):
@@ -165,7 +167,16 @@ def _factor(
     if metre != 1.0:
         yield edit(family, value / size * metre, "{} left out, the rest worked in kN and m")
         yield edit(f"{family} twice", value * size / metre, "{} taken twice, worked in kN and m")
-    yield edit("inverted", value / size**2, "{} on the other side of the fraction bar")
+    if not _vanishes(line, at, value / size**2):
+        yield edit("inverted", value / size**2, "{} on the other side of the fraction bar")
+
+
+def _vanishes(line: Line, at: int, value: float) -> bool:
+    """Tell whether a term of a sum becomes next to nothing: it is told as left out."""
+    places = line.places
+    above = places.places[at].above
+    is_term = above >= 0 and places.places[above].operation in SUM
+    return is_term and abs(value) < NOTHING * abs(places.values[at])
 
 
 def _said(line: Line, at: int, said: str) -> str:
@@ -208,7 +219,10 @@ def _brackets(line: Line, at: int, factor: int, value: float, way: int) -> Itera
             ways = [rest * first + last, first + rest * last]
         else:
             ways = [rest / first + last] if first else []
+        left_out = (rest * first, rest * last) if way > 0 else ()
         for other in ways:
+            if any(abs(other - alone) <= NOTHING * abs(alone) for alone in left_out):
+                continue  # told as the term left out
             spread = half + abs(other) * _relative(line, at)
             yield Edit("brackets", (at,), other, min(spread, abs(other) * 0.02), words)
 
@@ -268,6 +282,8 @@ def _power(line: Line, at: int, place: Place) -> Iterator[Edit]:
         said = partial("the power {:.3g} of {} in place of {:.3g}".format, other, text, exponent)
         metre = line.metre(line.places.places[place.below[0]].tree)
         value = base**other * metre ** (exponent - other)
+        if _vanishes(line, at, value):
+            continue
         spread = abs(other * value / base) * half if base else half
         yield Edit(family, (at,), value, spread, said)
 

@@ -106,6 +106,8 @@ def _kinship(line: Line, target: str, other: str, name: str) -> str:
     stem, theirs = scope.stems[target], scope.stems[other]
     if theirs == stem:
         return _place(line, target, other)
+    if theirs == scope.stems[line.node.id]:
+        return "far"  # the result of another place, for what this one is worked of
     return _taken_for(stem, name, theirs)
 
 

@@ -118,7 +118,9 @@ def _over(line: Line) -> list[str]:
 
 def _loads_of(line: Line) -> list[str]:
     scope = line.scope
-    near = [e for e in _over(line) if scope.units[e] == "N/mm"]
+    # A support moment rests on loads by type; the factored load of its case stands beside it.
+    beside = [n.id for n in scope.by_part[line.node.part] if scope.units.get(n.id) == "N/mm"]
+    near = [e for e in dict.fromkeys((*_over(line), *beside)) if scope.units[e] == "N/mm"]
     factored = [e for e in near if scope.stems[e] in ("w_f", "w_s")]
     return (factored or near)[:4]
 
