@@ -94,10 +94,12 @@ def test_right_arithmetic_is_silent(source: str) -> None:
     [
         ("M_r = phi_s*A_s*f_y*(d + a/2)/1e6", "differs from 10.1: the sign of a/2 is turned"),
         ("Mr = As*fy*(d - a/2)", "differs from 10.1: phi_s is missing"),
-        (
-            "V_c = phi_c*beta*min(math.sqrt(f_c), 8)*b_w*d_v",
-            "differs from 11.3.4: lambda is missing",
-        ),
+        ("V_c = phi_c*lam*min(math.sqrt(f_c), 8)*b_w*d_v", "differs from 11.3.4: beta is missing"),
+        ("Mr = phi_s*As*fy*(d - a)/1e6", "differs from 10.1: 2 is missing"),
+        ("def Mr(As, fy, d, a):\n    return As*fy*(d - a/2)", "phi_s is missing"),
+        ("Mr = lambda d, a: As*fy*(d - a/2)", "phi_s is missing"),
+        ("Vc = 0.2*0.65*math.sqrt(fc)*bw*d/1000", "the rule of A23.3-94, simplified method"),
+        ("Vc = 0.2*phi_c*math.sqrt(fc)*b*d", "the rule of A23.3-94, simplified method"),
         ("a = phi_s*As*fy/(0.85*phi_c*fc*bw)", "0.85 in place of alpha_1"),
         ("V_s = phi_s*A_v*f_y*d_v*np.tan(np.radians(theta))/s", "tan in place of cot of theta"),
         ("E_c = 5000*np.sqrt(f_c)", "5000 in place of 4500"),
@@ -109,6 +111,64 @@ def test_wrong_arithmetic_is_named(source: str, words: str) -> None:
     assert words in one.what
     assert one.what.startswith("cell 1, ")
     assert one.severity is Severity.MAJOR
+
+
+def test_the_density_factor_left_out_is_without_effect_in_normal_concrete() -> None:
+    (one,) = findings("f_r = 0.6*math.sqrt(f_c)", None)
+    assert "lambda is missing; without effect in concrete of normal density" in one.what
+    assert one.severity is Severity.MINOR
+
+
+@pytest.mark.parametrize(
+    "source",
+    [
+        "M_f = 0\nfor w, l in loads:\n    M_f = max(M_f, w*l**2/8)",  # counted on, no formula
+        "b, h = 380, 620",
+        "f_c, b_w = 32, 380",
+        "x = b_w = 380",
+        "f_c = Q_(32, 'MPa')",
+        "f_c = Q_(32000, 'kPa')",
+        # 0.85 x 2000 x 400 x (566 - 107.27/2) = 348.4e6 N.mm, whatever the unit of d and a
+        (
+            "d, a = Q_(56.6, 'cm'), Q_(10.727, 'cm')\n"
+            "A_s, f_y = Q_(2000, 'mm**2'), Q_(400, 'MPa')\n"
+            "phi_s = 0.85\nM_r = (phi_s*A_s*f_y*(d - a/2)).to('kN*m').m"
+        ),
+    ],
+)
+def test_code_that_is_right_is_told_nothing_untrue(source: str, record: Record) -> None:
+    found = findings(source, record)
+    assert [one.what for one in found if "where 2." not in one.what] == []
+
+
+@pytest.mark.parametrize(
+    ("source", "told"),
+    [("f_c, b_w = 35, 380", "f_c = 35; the record has 32 MPa"), ("b_w = f_c = 35", "f_c = 35")],
+)
+def test_what_is_typed_together_is_compared(source: str, told: str, record: Record) -> None:
+    assert any(told in one.what for one in findings(source, record))
+
+
+@pytest.mark.parametrize(
+    ("source", "output"),
+    [
+        ("d = 540\nprint('d =', d)\nd, b = 566, 380\nprint('d =', d)", "d = 540\nd = 566"),
+        ("d = 540\nprint('d =', d)\nd = 566\nprint('d =', d)", "d = 540\nd = 566"),
+        ("d = 566\nfor d in (500, 540):\n    print('d =', d)", "d = 500\nd = 540"),
+        ("d = 566\nwith opened() as d:\n    print('d =', d)", "d = 500"),
+        ("d, a = 566, 540\nd, a = a, d\nprint('d =', d)", "d = 540"),
+    ],
+)
+def test_a_name_set_more_than_once_is_no_older_output(source: str, output: str) -> None:
+    assert said(findings(source, None, outputs=(output,)), "older") == []
+
+
+def test_a_value_printed_before_it_is_set_anew_is_no_older_output() -> None:
+    cells = [
+        code("d = 540", 1, count=1),
+        code("print('d =', d)\nd = 566", 2, count=2, outputs=("d = 540",)),
+    ]
+    assert said(audit_cells(cells), "older") == []
 
 
 def test_what_a_sheet_records_is_read_where_there_is_no_record() -> None:

@@ -30,7 +30,12 @@ _OPERATORS: dict[type[ast.operator], str] = {
 _ROOTS = {"sqrt": "sqrt", "cbrt": "cbrt", "abs": "abs", "fabs": "abs"}
 _EXTREMES = {"min": "min", "max": "max", "minimum": "min", "maximum": "max"}
 _CONVERTED = ("to", "ito")
-_PASSED = ("float", "round", "int", "Quantity", "Q_")
+_PASSED = ("float", "round", "int")
+_QUANTITIES = ("Quantity", "Q_")
+_REGISTRIES = ("u", "ureg", "unit", "units")
+"""What the registry of units is called, of which ``m`` is the metre."""
+_ONE_UNIT = Number("1e0")
+"""A unit that is one of the internal units."""
 _BARE = ("magnitude", "m")
 _DEGREES_IN_RADIAN = Number("57.29577951308232")
 _PI = Number("3.141592653589793")
@@ -111,16 +116,39 @@ def _binary(node: ast.BinOp, depth: int) -> Tree | None:
     left, right = _read(node.left, depth), _read(node.right, depth)
     if sign is None or left is None or right is None:
         return None
+    if (right is _ONE_UNIT and sign in "*/") or (left is _ONE_UNIT and sign == "**"):
+        return left
     return Binary(sign, left, right)
 
 
 def _attribute(node: ast.Attribute, depth: int) -> Tree | None:
-    if node.attr in _BARE:
-        return _read(node.value, depth)
     unit = plain_spelling(node.attr)
-    if unit in UNITS and isinstance(node.value, ast.Name):  # such as u.mm
-        return Number(repr(internal_factor(unit)))
+    is_metre = node.attr not in _BARE or last_name(node.value) in _REGISTRIES
+    if unit in UNITS and isinstance(node.value, ast.Name) and is_metre:  # such as u.mm
+        return _unit(unit)
+    if node.attr in _BARE:
+        held = _read(node.value, depth)
+        to = _unit_of(node.value) if called(node.value) in _CONVERTED else None
+        return held if held is None or to is None else _over(held, to)
     return _name(node.attr)
+
+
+def _unit(unit: str) -> Number:
+    factor = internal_factor(unit)
+    return _ONE_UNIT if factor == 1 else Number(repr(factor))
+
+
+def _over(held: Tree, unit: Number) -> Tree:
+    return held if unit is _ONE_UNIT else Binary("/", held, unit)
+
+
+def _unit_of(node: ast.AST) -> Number | None:
+    """Return the unit that a call names last, as in ``Q_(8.4, "m")`` and ``x.to("m")``."""
+    match node:
+        case ast.Call(args=[*_, ast.Constant(value=str() as text)]):
+            unit = plain_spelling(text.replace("**", "^"))
+            return _unit(unit) if unit in UNITS else None
+    return None
 
 
 def _subscript(node: ast.Subscript, _: int) -> Tree | None:
@@ -134,8 +162,10 @@ def _call(node: ast.Call, depth: int) -> Tree | None:
     function = last_name(node.func)
     if function in _CONVERTED and isinstance(node.func, ast.Attribute):
         return _read(node.func.value, depth)
-    if function in _PASSED and node.args:
-        return _read(node.args[0], depth)
+    if function in _PASSED:
+        return _read(node.args[0], depth) if node.args else None
+    if function in _QUANTITIES and node.args:
+        return _quantity(node, depth)
     args = [_read(arg, depth) for arg in node.args]
     held = tuple(arg for arg in args if arg is not None)
     if node.keywords or not held or len(held) != len(args):
@@ -143,6 +173,14 @@ def _call(node: ast.Call, depth: int) -> Tree | None:
     if len(held) > 1:
         return Call(_EXTREMES[function], held) if function in _EXTREMES else None
     return _of_one(function, held[0])
+
+
+def _quantity(node: ast.Call, depth: int) -> Tree | None:
+    """Return a number with its unit; a unit that is not read here gives nothing."""
+    number, unit = _read(node.args[0], depth), _unit_of(node)
+    if len(node.args) == 1 or number is None or unit is _ONE_UNIT:
+        return number
+    return None if unit is None else Binary("*", number, unit)
 
 
 def _of_one(function: str, tree: Tree) -> Tree | None:

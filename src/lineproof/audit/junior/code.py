@@ -33,6 +33,8 @@ _OWN = Severity.OBSERVATION
 _SAME = 5e-4
 _NEAR = 6e-3
 _WORD = re.compile(r"[A-Za-z0-9/.·²³⁴^*]+")
+_CONVERTED = re.compile(r"\.i?to\([^()]*\)\.(?:m|magnitude)\b")
+_BARE = re.compile(r"(?<!\bu)(?<!\bureg)(?<!\bunit)(?<!\bunits)\.(?:m|magnitude)\b")
 _HIDDEN_STRESS = frozenset(["kPa", "Pa", "GPa", "psi", "ksi", "psf", "ksf"])
 
 
@@ -46,6 +48,23 @@ def in_order(codes: Sequence[Code]) -> Iterator[tuple[Assigned, Mapping[str, flo
         for made in assigned(code):
             yield made, values
             _keep(made, values)
+
+
+def set_in_cells(
+    codes: Sequence[Code],
+) -> Iterator[tuple[Code, Mapping[str, float], Mapping[str, list[float | None]]]]:
+    """Give every cell with the values known before it, and all that it sets, None for unknown.
+
+    The first mapping changes as the walk goes on.
+    """
+    values: dict[str, float] = {}
+    for code in codes:
+        found: dict[str, list[float | None]] = {}
+        before = dict(values)
+        for made in assigned(code):
+            _keep(made, values)
+            found.setdefault(made.symbol, []).append(values.get(made.symbol))
+        yield code, before, found
 
 
 def cell_by_cell(codes: Sequence[Code]) -> Iterator[tuple[Code, Mapping[str, float]]]:
@@ -66,7 +85,9 @@ def _keep(made: Assigned, values: dict[str, float]) -> None:
 
 
 def _value(made: Assigned, values: Mapping[str, float]) -> float | None:
-    if made.tree is None or not set(names_of(made.tree)) <= values.keys():
+    if made.tree is None or _BARE.search(_CONVERTED.sub("", made.text)):
+        return None  # a bare number is in the unit that its quantity happens to have
+    if not set(names_of(made.tree)) <= values.keys():
         return None
     try:
         return evaluated(made.tree, values)
@@ -84,6 +105,7 @@ def code_findings(codes: Sequence[Code], scope: Scope | None) -> Iterator[Findin
             continue
         if not _is_number(made.tree):
             known = bool(catalogue_of(made.symbol)) and not isinstance(made.tree, Name)
+            known = known and made.symbol not in names_of(made.tree)  # which is counted on
             if known and (compared := compared + 1) <= MOST:
                 held = judged(_hand(made), find, units)
                 # A letter may be anything in code: only what is like the formula is meant by it.
@@ -165,7 +187,7 @@ def _typed(made: Assigned, scope: Scope | None) -> Iterator[Finding]:
     value = _value(made, {})
     letter = len(made.name) == 1  # which may be anything in code
     where = f"{made.cell.name}: {made.name} = {made.text}"
-    if value is None:
+    if not value:  # nothing known, or a sum that begins with nothing
         return
     if not nodes:
         if made.symbol in RESULTS and not letter:

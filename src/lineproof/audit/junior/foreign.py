@@ -2,10 +2,22 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from functools import cache
 
-from lineproof.audit.junior.sample import equal, points_for, sampled
-from lineproof.formula import Tree, names_of, parse_line
+from lineproof.audit.junior.edits import replaced
+from lineproof.audit.junior.sample import (
+    constant_ratio,
+    is_usual,
+    points_for,
+    power_of_ten,
+    sampled,
+)
+from lineproof.formula import Name, Number, Tree, names_of, parse_line
+from lineproof.formula.tree import numbers_of
+
+_FACTORS = frozenset(["phi_c", "phi_s"])
+"""Factors that are typed as numbers in code."""
 
 _ROWS = (
     # formula, whose rule it is; MPa and mm throughout. From memory, as a checker knows them.
@@ -55,12 +67,33 @@ def rules_of(symbol: str) -> tuple[tuple[Tree, str, str], ...]:
     return _rules().get(symbol, ())
 
 
-def foreign_rule(symbol: str, tree: Tree) -> str:
-    """Return whose rule a formula is, if it is one of those known here, else ""."""
-    names = set(names_of(tree))
+def foreign_rule(symbol: str, tree: Tree, *, scales: bool = False) -> str:
+    """Return whose rule a formula is, if it is one of those known here, else "".
+
+    A factor may be typed as a number, and b be the width of the web; with ``scales`` a power of ten
+    is a conversion of units.
+    """
     for rule, _, whose in rules_of(symbol):
-        if names and set(names_of(rule)) == names:
-            points = points_for(names)
-            if equal(sampled(tree, points), sampled(rule, points)):
+        wanted = set(names_of(rule))
+        for form in _forms(tree, wanted):
+            if not wanted or set(names_of(form)) != wanted:
+                continue
+            points = points_for(wanted)
+            factor = constant_ratio(sampled(form, points), sampled(rule, points))
+            power = None if factor is None else power_of_ten(factor)
+            if power == 0 or (scales and power is not None):
                 return whose
     return ""
+
+
+def _forms(tree: Tree, wanted: set[str]) -> Iterator[Tree]:
+    """Give a formula as written, and with the names of a rule for what may stand for them."""
+    if "b" in names_of(tree) and "b" not in wanted and "b_w" in wanted:
+        tree = replaced(tree, {Name("b"): Name("b_w")})
+    yield tree
+    missing = wanted - set(names_of(tree))
+    if len(missing) == 1 and missing <= _FACTORS:
+        (name,) = missing
+        for text in numbers_of(tree):
+            if is_usual(name, float(text)):
+                yield replaced(tree, {Number(text): Name(name)})

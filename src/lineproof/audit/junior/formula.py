@@ -25,6 +25,7 @@ _FACTORS = ("phi_c", "phi_s", "f_c", "f_y")
 _LEAST_DIGITS = 3
 _NO_EFFECT = 0.005
 _LONGEST_TEXT = 120
+_WITHOUT_DENSITY = "lambda is missing"
 
 Lookup = Callable[[str], Node | None]
 
@@ -64,7 +65,7 @@ def judged(hand: Hand, find: Lookup, units: Mapping[str, str]) -> Iterator[Findi
 
 
 def _unlike(hand: Hand, tree: Tree, nearest: Formula) -> Finding:
-    rule = foreign_rule(hand.symbol, tree)
+    rule = foreign_rule(hand.symbol, tree, scales=hand.scales)
     said = f"is the rule of {rule}" if rule else "is a formula of its own"
     return finding(
         Severity.MAJOR if rule else Severity.OBSERVATION,
@@ -81,7 +82,7 @@ def _differs(hand: Hand, tree: Tree, met: Compared, nearest: Formula, find: Look
     said = listed(map(plain, met.differences))
     mine, right = _both(hand, tree, nearest, find)
     what = f"{hand.where}: {_short(hand.text)} differs from {clause}: {said}"
-    rule = foreign_rule(hand.symbol, tree)
+    rule = foreign_rule(hand.symbol, tree, scales=hand.scales)
     if rule:
         what += f" (it is the rule of {rule})"
     severity = Severity.MAJOR
@@ -92,6 +93,9 @@ def _differs(hand: Hand, tree: Tree, met: Compared, nearest: Formula, find: Look
             what += f"; without effect here, both give {shown_in(right, unit)}"
         else:
             what += f"; it gives {shown_in(mine, unit)}, {clause} gives {shown_in(right, unit)}"
+    elif said == _WITHOUT_DENSITY:
+        severity = Severity.MINOR
+        what += "; without effect in concrete of normal density, where it is 1"
     return finding(
         severity, what, hand.ids, clause, f"{nearest.text}: {nearest.title}; use the catalogue's"
     )  # fmt: skip

@@ -209,7 +209,10 @@ def _by_constants(edit: _Edit) -> Iterator[_Edit]:
 
 def _exchange(edit: _Edit, swaps: Mapping[str, str]) -> _Edit:
     trees: dict[Tree, Tree] = {Number(wanted): Number(given) for wanted, given in swaps.items()}
-    words = tuple(f"{given} in place of {wanted}" for wanted, given in swaps.items())
+    words = tuple(
+        f"{given} in place of {wanted}" if float(given) != 1 else f"{wanted} is missing"
+        for wanted, given in swaps.items()
+    )
     cost = edit.cost + _PLACED * len(swaps)
     return _Edit(replaced(edit.theirs, trees), edit.mine, (*edit.words, *words), cost)
 

@@ -94,17 +94,17 @@ def _without_magic(line: str) -> str:
 def assigned(code: Code) -> Iterator[Assigned]:
     """Give the assignments of a cell in order."""
     lines = code.source.split("\n")
-    for statement, plain in _statements(code):
-        target, value = _target(statement)
-        if target is None or value is None:
-            continue
-        text = written(lines, value) if hasattr(value, "lineno") else ""
-        typed = value.value if isinstance(value, ast.Constant) else None
-        _, _, comment = _cut(lines, statement.end_lineno, statement.end_col_offset).partition("#")
-        yield Assigned(
-            code.cell, target, symbol_of(target), text, tree_of(value),
-            typed if isinstance(typed, str) else "", comment.strip(), plain,
-        )  # fmt: skip
+    for statement, plain, function in _statements(code):
+        for target, value in _bound(statement, function):
+            text = written(lines, value) if hasattr(value, "lineno") else ""
+            typed = value.value if isinstance(value, ast.Constant) else None
+            end = statement.end_lineno, statement.end_col_offset
+            _, _, comment = _cut(lines, *end).partition("#")
+            made = value.body if isinstance(value, ast.Lambda) else value
+            yield Assigned(
+                code.cell, target, symbol_of(target), text, tree_of(made),
+                typed if isinstance(typed, str) else "", comment.strip(), plain and made is value,
+            )  # fmt: skip
 
 
 def written(lines: Sequence[str], node: ast.expr) -> str:
@@ -126,27 +126,65 @@ def _cut(lines: Sequence[str], line: int | None, column: int | None) -> str:
     return lines[line - 1].encode()[column or 0 :].decode(errors="replace")
 
 
-def _target(statement: ast.stmt) -> tuple[str | None, ast.expr | None]:
+def _bound(statement: ast.stmt, function: str) -> Iterator[tuple[str, ast.expr]]:
+    """Give the names that a statement sets, each with what it is set to as far as text shows it.
+
+    What a function gives back is given under the name of the function.
+    """
     match statement:
-        case ast.Assign(targets=[ast.Name(id=name)], value=value):
-            return name, value
-        case ast.AnnAssign(target=ast.Name(id=name), value=value):
-            return name, value
-        case ast.AugAssign(target=ast.Name(id=name)):
-            return name, ast.Constant(None)
-    return None, None
+        case ast.Assign(targets=targets, value=value):
+            for target in targets:
+                yield from _matched(target, value)
+        case ast.AnnAssign(target=ast.Name(id=name), value=ast.expr() as value):
+            yield name, value
+        case ast.Return(value=ast.expr() as value) if function:
+            yield function, value
+        case ast.AugAssign(target=target) | ast.For(target=target) | ast.AsyncFor(target=target):
+            yield from _matched(target, _UNKNOWN)
+        case ast.With(items=items) | ast.AsyncWith(items=items):
+            for item in items:
+                yield from _matched(item.optional_vars, _UNKNOWN)
 
 
-def _statements(code: Code) -> Iterator[tuple[ast.stmt, bool]]:
-    """Give statements in order, and whether they run once; loops and branches may not."""
-    waiting = [(s, True) for s in reversed(code.tree.body)] if code.tree else []
+_UNKNOWN = ast.Constant(None)
+
+
+def _matched(target: ast.expr | None, value: ast.expr) -> Iterator[tuple[str, ast.expr]]:
+    """Give names and values of ``b, h = 350, 650``; of what is exchanged no value is known."""
+    match target, value:
+        case ast.Name(id=name), _:
+            yield name, value
+        case ast.Tuple(elts=targets) | ast.List(elts=targets), _:
+            set_here = {n.id for n in ast.walk(target) if isinstance(n, ast.Name)}
+            used = {n.id for n in ast.walk(value) if isinstance(n, ast.Name)}
+            held = value.elts if isinstance(value, ast.Tuple | ast.List) else []
+            alike = len(held) == len(targets) and not set_here & used
+            alike = alike and not any(isinstance(e, ast.Starred) for e in (*held, *targets))
+            for each, its in zip(
+                targets, held if alike else [_UNKNOWN] * len(targets), strict=True
+            ):
+                yield from _matched(each, its)
+        case ast.Starred(value=inner), _:
+            yield from _matched(inner, _UNKNOWN)
+
+
+def _statements(code: Code) -> Iterator[tuple[ast.stmt, bool, str]]:
+    """Give statements in order, whether they run once, and the function in which they stand.
+
+    Loops and branches may run often or never.
+    """
+    waiting = [(s, True, "") for s in reversed(code.tree.body)] if code.tree else []
     while waiting:
-        statement, plain = waiting.pop()
-        yield statement, plain
+        statement, plain, function = waiting.pop()
+        yield statement, plain, function
         inner = plain and isinstance(statement, ast.With)
+        if isinstance(statement, ast.FunctionDef | ast.AsyncFunctionDef):
+            function = statement.name
+        elif isinstance(statement, ast.ClassDef):
+            function = ""
         blocks = [getattr(statement, name, []) for name in ("body", "orelse", "finalbody")]
         held = [s for block in blocks if isinstance(block, list) for s in block]
-        waiting += [(s, inner) for s in reversed(held) if isinstance(s, ast.stmt)]
+        waiting += [(s, inner, function) for s in reversed(held) if isinstance(s, ast.stmt)]
 
 
 def recorded(code: Code) -> Iterator[Recorded]:

@@ -11,7 +11,7 @@ from typing import Any
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.junior.arithmetic import symbol_of
 from lineproof.audit.junior.cells import CODE, PARAMETERS, Cell
-from lineproof.audit.junior.code import cell_by_cell
+from lineproof.audit.junior.code import set_in_cells
 from lineproof.audit.junior.python import Code, Recorded, assigned, recorded
 from lineproof.audit.junior.scope import Scope, finding, listed, name_of
 from lineproof.audit.junior.when import When
@@ -165,18 +165,39 @@ def _shows(code: Code) -> bool:
 def _printed(codes: Sequence[Code]) -> Iterator[Finding]:
     """Compare numbers that a cell printed with what its code gives as it stands."""
     left = _LONGEST_OUTPUTS
-    for code, values in cell_by_cell(codes):
+    for code, before, made in set_in_cells(codes):
         text = "\n".join(output[:_LONGEST_OUTPUT] for output in code.cell.outputs)[:left]
         left -= len(text)
         for name, number in _SHOWN.findall(text)[:_MOST_SHOWN]:
-            value = values.get(symbol_of(name))
-            if value is not None and not _agrees(number, value):
+            values = _values_of(name, code, before, made)
+            value = values[-1] if values else None
+            if value is not None and not any(_agrees(number, each) for each in values):
                 yield finding(
                     Severity.MAJOR,
                     f"{code.cell.name} shows {name} = {number}; its code as it stands gives "
                     f"{value:.6g}: the output is older than an input",
                     advice=RUN_ALL,
                 )
+
+
+def _values_of(
+    name: str, code: Code, before: Mapping[str, float], made: Mapping[str, list[float | None]]
+) -> list[float]:
+    """Return all values that a name has where its cell may print it; none where one is unknown."""
+    symbol = symbol_of(name)
+    values = list(made.get(symbol, ()))
+    if not values or _is_used_first(code, name):
+        values.insert(0, before.get(symbol))
+    known = [value for value in values if value is not None]
+    return known if len(known) == len(values) else []
+
+
+def _is_used_first(code: Code, name: str) -> bool:
+    """Tell whether a cell uses a name above the line that sets it first."""
+    nodes = [n for n in ast.walk(code.tree or ast.Module([], [])) if isinstance(n, ast.Name)]
+    sets = [n.lineno for n in nodes if n.id == name and isinstance(n.ctx, ast.Store)]
+    uses = [n.lineno for n in nodes if n.id == name and isinstance(n.ctx, ast.Load)]
+    return bool(sets) and bool(uses) and min(uses) <= min(sets)
 
 
 def _agrees(number: str, value: float) -> bool:
