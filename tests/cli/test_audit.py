@@ -219,6 +219,53 @@ def test_a_notebook_alone_and_against_claims(
     assert beam_file.read_bytes() == before
 
 
+def _plain(folder: Path, *cells: str) -> Path:
+    """Write a notebook of plain Python that was run."""
+    made = [
+        {
+            "cell_type": "code",
+            "source": source,
+            "execution_count": at,
+            "metadata": {},
+            "outputs": [],
+        }
+        for at, source in enumerate(cells, 1)
+    ]
+    path = folder / "own.ipynb"
+    path.write_text(
+        json.dumps({"cells": made, "metadata": {}, "nbformat": 4, "nbformat_minor": 5}), "utf-8"
+    )
+    return path
+
+
+def test_a_notebook_of_plain_python_is_read_as_code(tmp_path: Path, capsys: Capture) -> None:
+    """M_r without phi_s, 10.1; ``shear`` is no symbol of the catalogue."""
+    own = _plain(
+        tmp_path, "As, fy, d, a = 2000, 400, 566, 107", "Mr = As*fy*(d - a/2)\nshear = 2*d"
+    )
+    assert audit(own) == 1
+    said = capsys.readouterr().out
+    assert said.startswith("own.ipynb\nnote: It holds no record")
+    assert "Compared with the catalogue, by their names: Mr." in said
+    assert "not compared: shear." in said
+    assert "cell 2, Mr: Mr = As*fy*(d - a/2) differs from 10.1: phi_s is missing" in said
+    assert audit(own, "--json") == 1
+    assert json.loads(capsys.readouterr().out)["judged"] == []
+
+
+@pytest.mark.parametrize("option", ["--claims", "--blank", "--into", "--drawing"])
+def test_what_needs_a_record_is_refused_to_plain_python(
+    option: str, tmp_path: Path, capsys: Capture
+) -> None:
+    assert audit(_plain(tmp_path, "x = 1"), option, tmp_path / "t.csv") == 2
+    assert "holds no record" in capsys.readouterr().err
+
+
+def test_a_calc_that_was_not_closed_is_no_plain_python(tmp_path: Path, capsys: Capture) -> None:
+    assert audit(_plain(tmp_path, "from lineproof import Sheet, beams", "x = 1")) == 2
+    assert "end it with a cell 'sheet.close()'" in capsys.readouterr().err
+
+
 def test_a_cell_changed_after_its_run_is_found(
     beam: Notebook, tmp_path: Path, capsys: Capture
 ) -> None:

@@ -111,7 +111,8 @@ def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
         description="With --claims: judge every value that somebody else claims, and name the "
         "origin of each error, the likely slip, and what it does to the checks; the table is "
         "the one that --blank writes, with the column 'claimed' filled in. Without: search "
-        "the calc itself for wrong lines and for what is missing. Nothing in a file is run.",
+        "the calc itself for wrong lines and for what is missing; of a notebook of plain Python, "
+        "its code. Nothing in a file is run.",
     )
     audit.add_argument(
         "record", type=Path, metavar="RECORD", help="notebook, PDF, HTML or record of the calc"

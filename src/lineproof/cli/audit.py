@@ -19,7 +19,7 @@ from lineproof.audit.search.drawing_rows import HEADINGS
 from lineproof.cli.audit_output import as_data, as_text
 from lineproof.cli.files import write_all
 from lineproof.errors import FaultList, UserError
-from lineproof.notebook.audited import audited, picked
+from lineproof.notebook.audited import audited, audited_code, picked
 from lineproof.notebook.records import read_records
 from lineproof.notebook.reviews import read_review_file, refuse_originators
 from lineproof.record import Record
@@ -31,6 +31,9 @@ DONE, FOUND = 0, 1
 def run(options: argparse.Namespace) -> int:
     """Audit a calculation or write a blank table; returns 1 where there is a finding."""
     _refuse_idle(options)
+    code = None if _asks_for_a_record(options) else audited_code(options.record)
+    if code is not None:
+        return _told(code, None, options)
     record = picked(read_records(options.record), options.record, options.calc)
     if options.blank or options.blank_full or options.blank_drawing:
         _write_blank(record, options)
@@ -43,6 +46,16 @@ def run(options: argparse.Namespace) -> int:
     if files:
         write_all(files)
         sys.stderr.writelines(f"{printable(str(path))}\n" for path in sorted(files))
+    return _told(audit, graph, options)
+
+
+def _asks_for_a_record(options: argparse.Namespace) -> bool:
+    """Tell whether what is asked for needs a calc: a table to compare, a report, a review."""
+    tables = (options.claims, options.blank, options.blank_full, options.blank_drawing)
+    return any((*tables, options.drawing, options.into, options.review, options.calc))
+
+
+def _told(audit: Audit, graph: Graph | None, options: argparse.Namespace) -> int:
     if options.json:
         sys.stdout.write(json.dumps(as_data(audit, graph), indent=1, allow_nan=False) + "\n")
     else:

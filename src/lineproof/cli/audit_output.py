@@ -32,14 +32,17 @@ _REMARKED = (Verdict.OTHER_METHOD, Verdict.SAFE_ROUNDING)
 """Verdicts that are no findings, but of which a checker wants to read."""
 
 
-def as_text(audit: Audit, graph: Graph) -> list[str]:
-    """Return counts, findings by severity, and remarks, a line each."""
+def as_text(audit: Audit, graph: Graph | None) -> list[str]:
+    """Return counts, findings by severity, and remarks, a line each; no graph: of code alone."""
     return [printable(line).rstrip() for line in _lines(audit, graph)]
 
 
-def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
-    title = graph.record.data["calc"].get("title", "")
-    yield f"{audit.calc}  {title}  digest {audit.digest}"
+def _lines(audit: Audit, graph: Graph | None) -> Iterator[str]:
+    if graph is None:
+        yield audit.calc
+    else:
+        title = graph.record.data["calc"].get("title", "")
+        yield f"{audit.calc}  {title}  digest {audit.digest}"
     if audit.judged:
         yield _counts(audit)
     yield from (f"note: {note}" for note in audit.notes)
@@ -55,7 +58,8 @@ def _lines(audit: Audit, graph: Graph) -> Iterator[str]:
         for finding in group:
             number += 1
             yield from _finding(number, finding)
-    yield from _remarks(audit, graph)
+    if graph is not None:
+        yield from _remarks(audit, graph)
 
 
 def _counts(audit: Audit) -> str:
@@ -90,7 +94,7 @@ def _remarks(audit: Audit, graph: Graph) -> Iterator[str]:
         yield f"      {judged.id} ({node.label}): {claim} claimed; {judged.note}"
 
 
-def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
+def as_data(audit: Audit, graph: Graph | None) -> dict[str, Any]:
     """Return an audit as plain data.
 
     It holds ``calc``, ``digest``, ``counts``, ``judged``, ``findings``, ``shared`` (sentences on
@@ -99,11 +103,12 @@ def as_data(audit: Audit, graph: Graph) -> dict[str, Any]:
     Values of a judged line stand in ``unit``, the unit in which the line prints.
     """
     counts = Counter(str(judged.verdict) for judged in audit.judged)
+    claimed = [j for j in audit.judged if j.claim is not None]
     return {
         "calc": audit.calc,
         "digest": audit.digest,
         "counts": dict(sorted(counts.items())),
-        "judged": [_judged(j, graph[j.id]) for j in audit.judged if j.claim is not None],
+        "judged": [] if graph is None else [_judged(j, graph[j.id]) for j in claimed],
         "findings": [_finding_data(finding) for finding in audit.findings],
         "shared": list(shared_slips(audit)),
         "notes": list(audit.notes),

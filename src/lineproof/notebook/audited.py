@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+import re
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
@@ -13,18 +14,20 @@ from lineproof.audit.claims.tables import read_table
 from lineproof.audit.data import Audit, Finding
 from lineproof.audit.findings import importance
 from lineproof.audit.graph import Graph
-from lineproof.audit.junior.search import Cell, audit_cells
+from lineproof.audit.junior.search import Cell, audit_cells, formulas_read
 from lineproof.audit.search.drawing import drawing_findings
 from lineproof.errors import UserError
-from lineproof.notebook.cells import cells_of, joined, load_notebook
+from lineproof.notebook.cells import Cell as Stored
+from lineproof.notebook.cells import cells_of, data_of, joined, load_notebook
 from lineproof.notebook.read import calc_of
 from lineproof.notebook.records import altered_lines, read_records
-from lineproof.record import Record
+from lineproof.record import MIME, Record
 
 if TYPE_CHECKING:
     from lineproof.sheet import Sheet
 
 _MOST_NAMED = 3
+_MOST_LISTED = 20
 
 
 class CalcAudit:
@@ -83,6 +86,41 @@ def audited(graph: Graph, path: Path, claims: Path | None, drawing: Path | None)
     return replace(audit, findings=tuple(sorted(found, key=importance)))
 
 
+def audited_code(path: Path) -> Audit | None:
+    """Return the audit of a notebook of plain Python, read as text; None for another file.
+
+    A notebook with a record is another file, and one that makes a record once it is run.
+    """
+    if path.suffix.lower() != ".ipynb":
+        return None
+    cells = cells_of(load_notebook(path), str(path))
+    if any(any(data_of(c, MIME)) or _MAKES_RECORDS.search(c.source) for c in cells):
+        return None
+    read = _as_read(cells)
+    notes = [
+        _NO_RECORD,
+        *map(_listed, _COMPARED, formulas_read(read)),
+    ]
+    return Audit(path.name, "", (), audit_cells(read), tuple(filter(None, notes)))
+
+
+_MAKES_RECORDS = re.compile(r"^\s*(?:from|import)\s+lineproof\b", re.MULTILINE)
+_NO_RECORD = (
+    "It holds no record: its code is read as text. Nothing is worked again, and no check is looked "
+    "for."
+)
+_COMPARED = (
+    "Compared with the catalogue, by their names", "Worked out under other names, and not compared",
+)  # fmt: skip
+
+
+def _listed(said: str, names: Sequence[str]) -> str:
+    more = len(names) - _MOST_LISTED
+    if not names:
+        return ""
+    return f"{said}: {', '.join(names[:_MOST_LISTED])}{f' and {more} more' if more > 0 else ''}."
+
+
 def picked(records: Sequence[Record], path: Path, calc: str | None) -> Record:
     """Return the one record asked for; raises :class:`UserError` that names them all."""
     ids = [record.calc_id for record in records]
@@ -137,11 +175,14 @@ def _of_notebook(path: Path, record: Record) -> tuple[Finding, ...]:
         calc_of(data, path.name)
     except UserError as error:
         remarks = error.faults
-    cells = [
+    return audit_cells(_as_read(cells_of(data, str(path))), record, remarks)
+
+
+def _as_read(cells: Iterable[Stored]) -> list[Cell]:
+    return [
         Cell(c.number, c.kind, c.source, c.tags, c.count, tuple(map(_text, c.outputs)))
-        for c in cells_of(data, str(path))
+        for c in cells
     ]
-    return audit_cells(cells, record, remarks)
 
 
 def _text(output: Mapping[str, Any]) -> str:

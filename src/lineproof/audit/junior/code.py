@@ -104,9 +104,7 @@ def code_findings(codes: Sequence[Code], scope: Scope | None) -> Iterator[Findin
         if PARAMETERS in made.cell.tags or made.tree is None:
             continue
         if not _is_number(made.tree):
-            known = bool(catalogue_of(made.symbol)) and not isinstance(made.tree, Name)
-            known = known and made.symbol not in names_of(made.tree)  # which is counted on
-            if known and (compared := compared + 1) <= MOST:
+            if is_compared(made) and (compared := compared + 1) <= MOST:
                 held = judged(_hand(made), find, units)
                 # A letter may be anything in code: only what is like the formula is meant by it.
                 yield from (f for f in held if len(made.name) > 1 or f.severity is not _OWN)
@@ -121,6 +119,19 @@ def code_findings(codes: Sequence[Code], scope: Scope | None) -> Iterator[Findin
             f"more than {MOST} formulas or {MOST_TYPED} typed numbers in code; the rest is not "
             "compared",
         )
+
+
+def is_compared(made: Assigned) -> bool:
+    """Tell whether the catalogue has a formula for what an assignment works out."""
+    if made.tree is None or _is_number(made.tree) or isinstance(made.tree, Name):
+        return False
+    # What is worked out of itself, as a largest value in a loop, is counted on and no formula.
+    return bool(catalogue_of(made.symbol)) and made.symbol not in names_of(made.tree)
+
+
+def is_worked(made: Assigned) -> bool:
+    """Tell whether an assignment works something out of other names."""
+    return made.tree is not None and bool(names_of(made.tree)) and not isinstance(made.tree, Name)
 
 
 def recorded_findings(codes: Sequence[Code]) -> Iterator[Finding]:

@@ -1,6 +1,6 @@
 """A junior's own notebook or package, read without running any of its code.
 
-Two calls, both pure functions of plain data:
+Calls, all pure functions of plain data:
 
 ``audit_record(record)`` for a record of any source: every line worked again with the first wrong
 one named, own formulas against the catalogue, constants typed for lines, givens that should be
@@ -24,18 +24,23 @@ from collections.abc import Iterable, Sequence
 import lineproof.beams  # noqa: F401 - registers the procedures that found values name
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.junior.cells import LONGEST_CELL, MOST_CELLS, MOST_CHARACTERS, Cell
-from lineproof.audit.junior.code import code_findings, recorded_findings
+from lineproof.audit.junior.code import (
+    code_findings,
+    is_compared,
+    is_worked,
+    recorded_findings,
+)
 from lineproof.audit.junior.editions import editions, header
 from lineproof.audit.junior.givens import own_givens
 from lineproof.audit.junior.hostile import hostile
 from lineproof.audit.junior.lines import own_lines
-from lineproof.audit.junior.python import read_code
+from lineproof.audit.junior.python import assigned, read_code
 from lineproof.audit.junior.recompute import recomputed
 from lineproof.audit.junior.scope import Scope, finding
 from lineproof.audit.junior.stale import stale
 from lineproof.record import Record
 
-__all__ = ["Cell", "audit_cells", "audit_record"]
+__all__ = ["Cell", "audit_cells", "audit_record", "formulas_read"]
 
 
 def audit_record(record: Record) -> tuple[Finding, ...]:
@@ -65,6 +70,15 @@ def audit_cells(
     if left:
         found.append(finding(Severity.OBSERVATION, f"{left} cells are more than are read here"))
     return _sorted(found)
+
+
+def formulas_read(cells: Sequence[Cell]) -> tuple[tuple[str, ...], tuple[str, ...]]:
+    """Return what code works out: names that were compared with the catalogue, and all others."""
+    codes = [code for cell in _readable(cells)[0] if (code := read_code(cell)) is not None]
+    made = [each for code in codes for each in assigned(code) if is_worked(each)]
+    compared = dict.fromkeys(each.name for each in made if is_compared(each))
+    others = dict.fromkeys(each.name for each in made if each.name not in compared)
+    return tuple(compared), tuple(others)
 
 
 def _of_record(scope: Scope) -> list[Finding]:
