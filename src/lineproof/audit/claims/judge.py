@@ -11,13 +11,20 @@ from lineproof.audit.claims.copies import stands_alone, without_circles, without
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
+from lineproof.audit.claims.on_the_way import OnTheWay
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
-from lineproof.audit.claims.propagate import Form, Worker, claimed_form
+from lineproof.audit.claims.propagate import Worker
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
 from lineproof.audit.claims.rewritten import used_as_written, worked_rightly
 from lineproof.audit.claims.safe_side import errs_safely
 from lineproof.audit.claims.twins import twins_of
-from lineproof.audit.claims.worlds import Worlds, as_recorded, claimed_above, unmoved_lines
+from lineproof.audit.claims.worlds import (
+    as_recorded,
+    claimed_above,
+    deviating_of,
+    unmoved_lines,
+    worlds_of,
+)
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.rank import reproduced, without_underscore
@@ -77,8 +84,9 @@ class _Judge:
         self.claims = {claim.id: claim for claim in claims}
         self.typed = {claim.id: claim.typed for claim in claims}
         self.worker = Worker(graph)
-        self.twins = twins_of(graph, self._deviating(), self.claims)
-        self.worlds = self._worlds()
+        deviating = deviating_of(graph, claims)
+        self.twins = twins_of(graph, deviating, self.claims)
+        self.worlds = worlds_of(self.worker, self.claims, deviating, self.twins)
         self.claimed_bench = Bench(self.worker, self.worlds.claimed, self.claims)
         self.benches = [self.claimed_bench]
         if self.worlds.sound is not self.worlds.claimed:
@@ -86,6 +94,7 @@ class _Judge:
         self.divided = divided_terms(self.claimed_bench)
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.numbers = numbers_of(graph, claims, self.worlds)
+        self.way = OnTheWay(self.worker, self.claims)
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
@@ -109,40 +118,6 @@ class _Judge:
             judged = self._input(node, claim) if not node.is_computed else self._line(node, claim)
             self._note(node, judged)
             yield judged
-
-    # -- the worlds ------------------------------------------------------------------------
-
-    def _deviating(self) -> list[Claim]:
-        return [c for c in self.claims.values() if not as_recorded(self.graph, c)]
-
-    def _worlds(self) -> Worlds:
-        deviating = self._deviating()
-        stands = {claim.id: self._stands(claim) for claim in self.claims.values()}
-        needed = set(self.claims) | set(self.graph.above(self.claims))
-        claimed = self.worker.world(stands, needed)
-        right = {claim.id: self._put_right(claim) for claim in deviating}
-        sound = self.worker.world(stands | right, needed, claimed) if deviating else claimed
-        copies = {copy: stands[claimed_id] for copy, claimed_id in self.twins.items()}
-        twin = self.worker.world(stands | copies, needed, claimed) if copies else claimed
-        return Worlds(claimed, sound, twin)
-
-    def _stands(self, claim: Claim) -> Form:
-        node, right = self.graph[claim.id], self.graph.stored[claim.id]
-        if node.is_computed:
-            return claimed_form(claim.id, claim.stands_for)
-        if not as_recorded(self.graph, claim):
-            return Form(claim.value)  # an input is used as it was typed
-        same = Interval(right, right).holds(claim.value)
-        return Form(right) if same else claimed_form(claim.id, claim.stands_for)
-
-    def _put_right(self, claim: Claim) -> Form:
-        right = self.graph.stored[claim.id]
-        if not self.graph[claim.id].is_computed:
-            return Form(right)
-        # With as many digits as were written: 20 000 for 20 leaves 0.05 open there, and not 50.
-        # Never more is open than as claimed: 0.5 for 539 mm says nothing of 485 to 593.
-        size = min(1.0, abs(right / claim.value)) if claim.value else 1.0
-        return Form(right, {claim.id: claim.stands_for.half * size})
 
     # -- verdicts --------------------------------------------------------------------------
 
@@ -183,10 +158,28 @@ class _Judge:
             return replace(made, verdict=Verdict.UNKNOWN, note=note)
         if by_used or stands.meets(worlds.twin.follows[node.id].interval):
             return self._carried(node, made)
+        return self._on_the_way(node, made) or self._not_following(node, claim, made)
+
+    def _not_following(self, node: Node, claim: Claim, made: Judged) -> Judged:
+        """Judge a line that does not follow from the values claimed, however these were carried."""
         miswritten = self._miswritten(node, claim)
         if miswritten is not None:
             return self._worked_rightly(node, made, miswritten)
         return self._unexplained(node, claim, made)
+
+    def _on_the_way(self, node: Node, made: Judged) -> Judged | None:
+        """Judge a line that follows where the lines above that nobody claimed are rounded too."""
+        stands = made.claim.stands_for if made.claim is not None else made.follows
+        met = [self.way.met(bench.world, node, stands) for bench in self.benches]
+        found = next(filter(None, met), None)
+        if found is None:
+            return None
+        note = f"follows where lines that are not claimed are rounded to {found[1]} digits"
+        if met[0] is None:
+            return replace(made, note=f"{note}, from the right values and not from those claimed")
+        if met[-1] is None:
+            return self._carried(node, replace(made, follows=found[0]))
+        return replace(made, follows=found[0], note=note)
 
     def _right_alone(self, node: Node, claim: Claim, made: Judged) -> Judged:
         """Judge a line that is right, or follows from right values, but not from those claimed."""

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Container, Iterable, Mapping
 from dataclasses import dataclass
 
-from lineproof.audit.claims.propagate import World
+from lineproof.audit.claims.propagate import Form, Worker, World, claimed_form
 from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph, Node
 
@@ -34,6 +34,52 @@ class Worlds:
         follows = [w.follows[node.id].interval for w in (self.claimed, self.sound)]
         # As recorded too: a spreadsheet shows rounded numbers and works with all their digits.
         return [*follows, Interval(node.stored, node.stored)]
+
+
+def deviating_of(graph: Graph, claims: Iterable[Claim]) -> list[Claim]:
+    """Return the claims that are not the recorded values."""
+    return [claim for claim in claims if not as_recorded(graph, claim)]
+
+
+def worlds_of(
+    worker: Worker,
+    claims: Mapping[str, Claim],
+    deviating: Iterable[Claim],
+    twins: Mapping[str, str],
+) -> Worlds:
+    """Work the record with values as claimed, with the deviating ones put right, and with twins.
+
+    ``twins`` are the claimed lines whose value lines that nobody claimed would repeat.
+    """
+    graph = worker.graph
+    stands = {claim.id: _stands(graph, claim) for claim in claims.values()}
+    needed = set(claims) | set(graph.above(claims))
+    claimed = worker.world(stands, needed)
+    right = {claim.id: _put_right(graph, claim) for claim in deviating}
+    sound = worker.world(stands | right, needed, claimed) if right else claimed
+    copies = {copy: stands[claimed_id] for copy, claimed_id in twins.items()}
+    twin = worker.world(stands | copies, needed, claimed) if copies else claimed
+    return Worlds(claimed, sound, twin)
+
+
+def _stands(graph: Graph, claim: Claim) -> Form:
+    right = graph.stored[claim.id]
+    if graph[claim.id].is_computed:
+        return claimed_form(claim.id, claim.stands_for)
+    if not as_recorded(graph, claim):
+        return Form(claim.value)  # an input is used as it was typed
+    same = Interval(right, right).holds(claim.value)
+    return Form(right) if same else claimed_form(claim.id, claim.stands_for)
+
+
+def _put_right(graph: Graph, claim: Claim) -> Form:
+    right = graph.stored[claim.id]
+    if not graph[claim.id].is_computed:
+        return Form(right)
+    # With as many digits as were written: 20 000 for 20 leaves 0.05 open there, and not 50.
+    # Never more is open than as claimed: 0.5 for 539 mm says nothing of 485 to 593.
+    size = min(1.0, abs(right / claim.value)) if claim.value else 1.0
+    return Form(right, {claim.id: claim.stands_for.half * size})
 
 
 def unmoved_lines(

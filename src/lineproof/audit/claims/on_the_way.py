@@ -1,0 +1,93 @@
+"""Lines that nobody claimed are rounded too: what follows where they were written with few digits.
+
+Who works by hand writes 22.6 kN/m for 22.56 and goes on with it. Where the table asks for the
+reaction alone, 94.9 kN for 94.8 is no slip. Each way of rounding gives one value, not a band, so
+that no more than such a value is let pass.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Collection
+from typing import NamedTuple
+
+from lineproof.audit.claims.propagate import Form, Worker, World
+from lineproof.audit.data import Interval
+from lineproof.audit.graph import Node
+from lineproof.errors import UserError
+from lineproof.formula.compiled import NOT_COMPUTED
+from lineproof.quantity.digits import significant
+from lineproof.quantity.units import internal_factor
+
+_TIE = 1e-9
+_LARGEST_WHOLE = 1e5
+"""Millimetres and square millimetres are written whole up to here."""
+_ALL = 40
+"""Lines in a row that are rounded; no table leaves out so many."""
+
+
+class _Way(NamedTuple):
+    """How lines are rounded: to so many digits, in whole units at least, how many in a row."""
+
+    digits: int
+    whole: bool
+    lines: int
+
+
+_WAYS = (
+    _Way(3, whole=False, lines=_ALL), _Way(3, whole=True, lines=_ALL),
+    _Way(4, whole=False, lines=_ALL), _Way(3, whole=False, lines=1), _Way(3, whole=True, lines=1),
+)  # fmt: skip
+
+
+class OnTheWay:
+    """What lines are where the lines above them that nobody claimed are rounded."""
+
+    def __init__(self, worker: Worker, claimed: Collection[str]) -> None:
+        self.worker, self.claimed = worker, claimed
+        self._kept: dict[tuple[int, str, _Way], Form] = {}
+
+    def met(self, world: World, node: Node, stands_for: Interval) -> tuple[Interval, int] | None:
+        """Return the first of a line's values that a claim meets, with the digits; None if none."""
+        if not any(map(self._is_open, node.args.values())):
+            return None
+        for way in _WAYS:
+            try:
+                interval = self._worked(world, node, way).interval
+            except (*NOT_COMPUTED, UserError):
+                continue
+            if stands_for.meets(interval):
+                return interval, way.digits
+        return None
+
+    def _is_open(self, entry_id: str) -> bool:
+        return entry_id not in self.claimed and self.worker.graph[entry_id].is_computed
+
+    def _worked(self, world: World, node: Node, way: _Way) -> Form:
+        used = {
+            i: self._rounded(world, self.worker.graph[i], way)
+            if self._is_open(i) else world.used[i]
+            for i in node.args.values()
+        }  # fmt: skip
+        return self.worker.form(node, used)
+
+    def _rounded(self, world: World, node: Node, way: _Way) -> Form:
+        key = id(world), node.id, way
+        if key not in self._kept:
+            above = way._replace(lines=way.lines - 1)
+            form = self._worked(world, node, above) if above.lines else world.used[node.id]
+            self._kept[key] = _written(form, internal_factor(node.unit), way)
+        return self._kept[key]
+
+
+def _written(form: Form, unit: float, way: _Way) -> Form:
+    """Return a value as it is written; one in the middle between two numbers may be either."""
+    value = abs(form.middle) / unit
+    if not value:
+        return form
+    whole = way.whole and 10**way.digits <= value < _LARGEST_WHOLE
+    number = significant(value, 0 if whole else way.digits)
+    step = 10.0 ** int(number.as_tuple().exponent)
+    if abs(abs(float(number) - value) - step / 2) <= _TIE * value:
+        return Form(form.middle, form.parts, form.rest + step / 2 * unit)
+    sign = 1.0 if form.middle > 0 else -1.0
+    return Form(sign * float(number) * unit, form.parts, form.rest)
