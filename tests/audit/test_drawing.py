@@ -170,6 +170,21 @@ def test_severity_by_direction_and_effect(
     assert finding.advice
 
 
+def test_stirrups_of_one_span_do_nothing_to_the_others() -> None:
+    """One leg of 100 mm2 at 350 mm: 0.06 x sqrt(32) x 380 x 350/400 = 112.9 mm2 is the minimum."""
+    record = demo("floor-beam")
+    spacing = next(i for i in items_of(record) if i.key == ("stirrup spacing", "span 2, zone 1"))
+    least = 0.06 * 32**0.5 * 380 * spacing.value / 400
+    (finding,) = found({("stirrups", "span 2, zone 1"): "1 legs 10M"})
+    assert finding.severity is CRITICAL
+    assert {effect.check.split("/")[0] for effect in finding.effects} == {
+        "shear-2-left", "shear-2-right",
+    }  # fmt: skip
+    minimum = next(e for e in finding.effects if e.check.endswith("/minimum-stirrups"))
+    assert minimum.claimed == pytest.approx(least / 100)
+    assert minimum.right == pytest.approx(least / 200)
+
+
 def test_open_stirrups_for_closed_ones_are_major() -> None:
     (finding,) = found({("stirrup form", "span 1, zone 1"): "open"}, "edge-beam")
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Mapping
+from collections.abc import Container, Mapping
 from dataclasses import dataclass
 
 import lineproof.beams  # noqa: F401 - registers the procedures of found values
@@ -100,12 +100,20 @@ def turned_decisions(graph: Graph, changed: Mapping[str, float]) -> tuple[str, .
     )
 
 
-def turned_sentence(graph: Graph, changed: Mapping[str, float], told: Told = CLAIMED) -> str:
+def turned_sentence(
+    graph: Graph,
+    changed: Mapping[str, float],
+    told: Told = CLAIMED,
+    parts: Container[str] | None = None,
+) -> str:
     """Return the sentence on decisions that changed values turn; nothing where none does.
+
+    ``parts`` are those in which the values are changed; without them it is the whole calc.
 
     The calc holds the lines of the branch taken alone, so that no effect of the other is known.
     """
-    turned = [graph[i] for i in turned_decisions(graph, changed)]
+    nodes = (graph[i] for i in turned_decisions(graph, changed))
+    turned = [node for node in nodes if parts is None or node.part in parts]
     if not turned:
         return ""
     titles = _titles(graph)

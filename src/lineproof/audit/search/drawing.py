@@ -78,6 +78,10 @@ _BARS = re.compile(r"(\d{1,3})\s*[-– x×]?\s*(\d\dM)", re.IGNORECASE | re.ASCI
 _LEGS = re.compile(r"(\d{1,2})\s*(?:legs?|[-– x×])?\s*(?:of\s+)?(\d\dM)", re.IGNORECASE | re.ASCII)
 _FORMS = {"open": 0.0, "closed": 1.0}
 _SHOWN_FAULTS = 40
+_SHARED = (
+    " The effects take the drawn bars as shared like the calc's; they hold nothing of what bars do "
+    "for shear, nor of their anchorage."
+)
 _THICKER = "Larger bars need longer development, hooks and laps, which the effects do not hold."
 
 
@@ -247,6 +251,8 @@ def _compared(graph: Graph, item: Item, drawn: Drawn) -> Iterator[Finding]:
         return
     changes = item.changes(drawn.value)
     effects = effects_of(graph, changes, DRAWN) if changes else ()
+    if item.parts is not None:
+        effects = tuple(e for e in effects if graph[e.check].part in item.parts)
     less = difference * item.more < 0
     worse = item.more == 0 or less or other > 0
     severity = _severity(item, effects, worse=worse)
@@ -293,7 +299,7 @@ def _advice(
     said = (
         _what_to_do(item, harmless=harmless),
         _THICKER * thicker,
-        turned_sentence(graph, changes, DRAWN),
+        turned_sentence(graph, changes, DRAWN, item.parts),
     )
     return " ".join(filter(None, said))
 
@@ -301,9 +307,7 @@ def _advice(
 def _what_to_do(item: Item, *, harmless: bool) -> str:
     if harmless:
         return "On the safe side by itself: see that it fits, and change calc or drawing."
-    shared = " The effects take the drawn bars as shared like the calc's." * (
-        item.name == BARS_ITEM
-    )
+    shared = _SHARED * (item.name == BARS_ITEM)
     return f"Change the drawing, or work the calc again with what is drawn.{shared}"
 
 

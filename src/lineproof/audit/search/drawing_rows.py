@@ -49,6 +49,7 @@ class Item:
     ``value`` is in internal units; of bars it is their area and ``text`` says them. ``more`` is
     1 where less than the calc's is worse, -1 where more is, 0 where both are. ``changes`` gives
     the lines of the calc that a drawn value stands for, so that its effects can be worked out.
+    Where such a line is that of the whole beam, ``parts`` are those in which it is drawn so.
     """
 
     name: str
@@ -59,6 +60,7 @@ class Item:
     more: int
     ids: tuple[str, ...] = ()
     changes: Callable[[float], Changed] = field(default=lambda _: {})
+    parts: frozenset[str] | None = None
 
     @property
     def key(self) -> tuple[str, str]:
@@ -225,10 +227,12 @@ def _stirrups(graph: Graph) -> Iterator[Item]:
         spacing, legs = _number(row, "Spacing, mm"), int(_number(row, "Legs"))
         area = area_of(legs, row["Stirrups"])
         text = f"{legs} legs {row['Stirrups']}"
-        yield Item(STIRRUPS_ITEM, place, "", area, text, 1, ("stirrups/A_v",), _to("stirrups/A_v"))
+        ids = tuple(_sections_in(graph, span, (start, end), spacing))
+        parts = frozenset(graph[entry_id].part for entry_id in ids)
+        legs_of = ("stirrups/A_v",)
+        yield Item(STIRRUPS_ITEM, place, "", area, text, 1, legs_of, _to(*legs_of), parts)
         closed = row["Form"] == "closed"
         yield Item(FORM_ITEM, place, "", float(closed), row["Form"], 1)
-        ids = tuple(_sections_in(graph, span, (start, end), spacing))
         yield Item(
             SPACING_ITEM, place, "mm", spacing, f"{spacing:g} mm", -1, ids, _to(*ids)
         )  # fmt: skip
