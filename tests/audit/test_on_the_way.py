@@ -93,3 +93,6 @@ def test_what_follows_by_rounding_does_not_show_that_a_value_was_not_used() -> N
     texts = {"beam/b_f": "3590", "beam/A_g": "1256500"}
     audit = audit_claims(record, [typed(graph, i, t) for i, t in texts.items()], graph)
     assert audit.findings == ()
+    (note,) = audit.notes
+    assert note.startswith("1 claim follows where lines that are not claimed are rounded")
+    assert "b_f (2.2)" in note

@@ -9,6 +9,7 @@ import numpy as np
 from lineproof.audit.claims.bars import bars_note
 from lineproof.audit.claims.conventions import convention_of
 from lineproof.audit.claims.judge import judge
+from lineproof.audit.claims.on_the_way import rounding_note
 from lineproof.audit.data import Audit, Claim, Finding
 from lineproof.audit.findings import findings_of, importance
 from lineproof.audit.graph import Graph
@@ -35,7 +36,11 @@ def audit_claims(record: Record, claims: Sequence[Claim], graph: Graph | None = 
     with np.errstate(all="ignore"):  # absurd claims lead procedures to infinities: no value
         convention = convention_of(graph, claims)
         judged = judge(graph, claims, searching(), convention)
-        said = (convention.sentence if convention.ids else "", bars_note(graph, claims))
+        said = (
+            convention.sentence if convention.ids else "",
+            bars_note(graph, claims),
+            rounding_note(graph, judged),
+        )
         notes = tuple(filter(None, said))
         return Audit(record.calc_id, record.digest, judged, findings_of(graph, judged), notes)
 

@@ -11,7 +11,7 @@ from lineproof.audit.claims.copies import stands_alone, without_circles, without
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
-from lineproof.audit.claims.on_the_way import OnTheWay
+from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Worker
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
@@ -174,7 +174,7 @@ class _Judge:
         found = next(filter(None, met), None)
         if found is None:
             return None
-        note = f"follows where lines that are not claimed are rounded to {found[1]} digits"
+        note = f"{FOLLOWS} {found[1]} digits"
         if met[0] is None:
             return replace(made, note=f"{note}, from the right values and not from those claimed")
         if met[-1] is None:

@@ -7,17 +7,21 @@ that no more than such a value is let pass.
 
 from __future__ import annotations
 
-from collections.abc import Collection
+from collections.abc import Collection, Iterable
 from typing import NamedTuple
 
 from lineproof.audit.claims.propagate import Form, Worker, World
-from lineproof.audit.data import Interval
-from lineproof.audit.graph import Node
+from lineproof.audit.data import Interval, Judged
+from lineproof.audit.graph import Graph, Node
 from lineproof.errors import UserError
 from lineproof.formula.compiled import NOT_COMPUTED
 from lineproof.quantity.digits import significant
 from lineproof.quantity.units import internal_factor
+from lineproof.sentences import counted
 
+FOLLOWS = "follows where lines that are not claimed are rounded to"
+"""How the note begins of a line that agrees so."""
+_MOST_NAMED = 6
 _TIE = 1e-9
 _LARGEST_WHOLE = 1e5
 """Millimetres and square millimetres are written whole up to here."""
@@ -77,6 +81,21 @@ class OnTheWay:
             form = self._worked(world, node, above) if above.lines else world.used[node.id]
             self._kept[key] = _written(form, internal_factor(node.unit), way)
         return self._kept[key]
+
+
+def rounding_note(graph: Graph, judged: Iterable[Judged]) -> str:
+    """Return the sentence on claims that agree so; nothing where none does."""
+    found = [each.id for each in judged if each.note.startswith(FOLLOWS)]
+    if not found:
+        return ""
+    named = ", ".join(f"{graph[i].symbol} ({graph[i].label})" for i in found[:_MOST_NAMED])
+    more = len(found) - _MOST_NAMED
+    named += f" and {more} more" if more > 0 else ""
+    follow = counted(len(found), "claim follows", "claims follow")
+    return (
+        f"{follow} where lines that are not claimed are rounded to three or four digits, as by "
+        f"hand: {named}. That is no error."
+    )
 
 
 def _written(form: Form, unit: float, way: _Way) -> Form:
