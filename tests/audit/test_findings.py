@@ -8,6 +8,7 @@ from dataclasses import replace
 import pytest
 from tests.audit import hand
 from tests.audit.hand import beam, typed
+from tests.beams.gallery import record_of
 
 from lineproof.audit.audit import audit_claims
 from lineproof.audit.data import Effect, Finding, Severity
@@ -60,6 +61,14 @@ def test_what_was_written_wrongly_and_used_rightly_moves_no_check() -> None:
     (effect,) = used.effects
     assert effect.claimed == pytest.approx(180 / 228.7, rel=1e-3)
     assert effect.right == pytest.approx(180 / 206.636, rel=1e-3)
+
+
+def test_where_another_factor_is_from_is_said() -> None:
+    """A23.3-94 had 0.60 for phi_c, 8.4.2 of the later editions 0.65."""
+    (finding,) = found(record_of(), {"materials/phi_c": "0.60"})
+    assert finding.advice.startswith("0.60 is known from: A23.3-94. Settle which input is right")
+    (other,) = found(record_of(), {"materials/phi_c": "0.61"})
+    assert other.advice.startswith("Settle which input is right")
 
 
 def test_a_digit_mistyped_may_be_chance_unless_it_was_used_rightly() -> None:

@@ -60,6 +60,8 @@ SECTION = {
     "b_w": "350 mm", "h": "650 mm", "b_f": "3600 mm", "h_f": "150 mm", "f_r": "3.286 MPa",
     "d": "596 mm", "f_c": "30 MPa", "f_y": "400 MPa", "phi_c": "0.65", "beta": "0.236",
     "lambda_": "1", "d_v": "536 mm", "zeta_s": "3", "delta_sus": "13.7 mm", "delta_Lr": "2.5 mm",
+    "E_c": "22500 MPa", "I_ea": "1330000000 mm4", "w_s": "34.9 kN/m", "l": "6.5 m",
+    "M_m": "62.6 kN.m", "M_h": "122 kN.m", "A_0": "9.8 m2", "A_L": "21 m2",
     "delta_DL": "16.2 mm", "y_b": "495 mm", "w_D1": "22.6 kN/m", "w_L1": "8.64 kN/m",
 }  # fmt: skip
 I_G = (
@@ -83,6 +85,13 @@ I_G = (
         # 3 x 16.2 = 48.6; right is 3 x 13.7 + 2.5 = 43.6, which one digit tells from it
         (["delta_t = zeta_s*delta_sus + delta_Lr", "delta_L = delta_DL - delta_sus"], "mm",
          "48.6", "taken as sustained"),
+        # 5 x 34.9 x 6500^4/(384 x 22500 x 1.33e9) = 3.1149e17/1.14912e16 = 27.107
+        (["M_s = w_s*l**2/8", "delta_i = 5*l**2/(48*E_c*I_ea)*(M_m - 0.2*M_h)"], "mm", "27.107",
+         "5*w_s*l**4/(384*E_c*I_ea), a simple span"),
+        # 0.002 x 350 x 650 = 455; 0.2 x sqrt(30) x 350 x 650/400 = 623.0
+        (["A_smin = 0.2*1.0*sqrt(f_c)*b_w*h/f_y"], "mm2", "455", "7.8.1, for slabs"),
+        # 0.3 + sqrt(9.8/10.5) = 1.2661; with 21 m2 it is 0.9831
+        (["r_L = 0.3 + sqrt(A_0/A_L)"], "", "1.2661", "half of the tributary area"),
         # 1.4 x 22.6 = 31.64; right is 1.25 x 22.6 + 1.5 x 8.64 = 41.21
         (["w_f = 1.25*w_D1 + 1.5*w_L1"], "kN/m", "31.64", "dead load alone, case 1"),
     ],
@@ -94,15 +103,16 @@ def test_another_rule_for_the_lines_own_is_named_first(
     with sheet.part("given", "Given"):
         for name, value in SECTION.items():
             sheet.given(name, value)
-    units = {"I_g": "mm4", "d_x": "mm", "delta_L": "mm"}
+    units = {"I_g": "mm4", "d_x": "mm", "delta_L": "mm", "M_s": "kN.m"}
     with sheet.part("beam", "Span 1"):
         for line in lines:
             own = units.get(line.partition(" ")[0], unit)
             numbers = {"1.0": "MPa^0.5"} if "1.0*sqrt" in line else {}
             sheet.line(formula(line, unit=own, numbers=numbers, title="own"))
     graph = Graph(sheet.close())
-    wanted = {"kN.m": "M_cr", "kN": "V_c", "mm": "delta_t", "kN/m": "w_f", "mm4": "I_g"}
-    asked = f"beam/{wanted[unit]}"
+    beside = ("d_x", "delta_L", "M_s")  # bring quantities into the part
+    symbols = [line.partition(" ")[0] for line in lines]
+    asked = f"beam/{[symbol for symbol in symbols if symbol not in beside][-1]}"
     assert says in find_slips(graph, asked, {}, typed(graph, asked, text))[0].sentence
 
 

@@ -8,7 +8,10 @@ from dataclasses import replace
 from lineproof.audit.data import Claim, Effect, Finding, Judged, Severity, Verdict
 from lineproof.audit.effects import effects_of, named_line, turned_sentence
 from lineproof.audit.graph import Graph, Node
+from lineproof.audit.slips.constants import source_of
+from lineproof.audit.slips.scope import stem
 from lineproof.audit.slips.search import none_fits
+from lineproof.record.entry import LOOKUP
 from lineproof.sentences import begun, counted
 from lineproof.typeset.values import told
 
@@ -163,8 +166,16 @@ def _advice(graph: Graph, judged: Judged, rightly: Sequence[str]) -> str:
     if judged.verdict is Verdict.ORIGIN:
         return none_fits(graph, judged.id)
     if judged.verdict is Verdict.INPUT:
-        return "Settle which input is right, and rework what rests on it."
+        return _of_input(graph[judged.id], judged.claim)
     return ""
+
+
+def _of_input(node: Node, claim: Claim | None) -> str:
+    """Say where another input may be from: 0.6 for phi_c is that of A23.3-94."""
+    is_read = node.kind == LOOKUP and claim is not None
+    source = source_of(stem(node.symbol), claim.value) if claim is not None and is_read else ""
+    known = f"{told(claim.typed, claim.unit)} is known from: {source}. " if claim and source else ""
+    return f"{known}Settle which input is right, and rework what rests on it."
 
 
 def _words(node: Node, judged: Judged, claim: Claim) -> str:

@@ -40,6 +40,7 @@ _ROWS = (
     ("beta_1 = 0.85 - 0.05*(f_c - 28)/7", "ACI 318"),
     ("A_smin = 1.4*b_w*d/f_y", "ACI 318 and A23.3-84"),
     ("A_smin = 0.25*sqrt(f_c)*b_w*d/f_y", "ACI 318"),
+    ("A_smin = 0.002*b_w*h", "7.8.1, for slabs"),
     ("A_smin = max(0.25*sqrt(f_c), 1.4)*b_w*d/f_y", "ACI 318"),
     ("A_vmin = 0.35*b_w*s/f_y", "A23.3-84 and ACI 318"),
     ("s_max = d/2", "ACI 318"),

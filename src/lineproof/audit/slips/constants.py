@@ -6,6 +6,7 @@ a wrong number comes from; no value here enters a calculation.
 
 from __future__ import annotations
 
+import math
 from typing import NamedTuple
 
 
@@ -139,6 +140,16 @@ BARS: tuple[tuple[str, float, float], ...] = (
     ("30M", 29.9, 700.0), ("35M", 35.7, 1000.0),
 )  # fmt: skip
 """Bars of G30.18: size, diameter in mm, area in mm2."""
+
+
+def source_of(symbol: str, value: float) -> str:
+    """Return where a value for a looked-up symbol stands, if it is one known here, else ""."""
+    others = (other for other in BY_SYMBOL.get(symbol, ()) if math.isclose(other.value, value))
+    found = next(others, None)
+    if found is not None:
+        return found.source
+    rows = (row for row in ROWS.get(symbol, ()) if math.isclose(row, value))
+    return "another row of the table" if next(rows, None) is not None else ""
 
 
 def of_constant(symbol: str, text: str, *, is_load: bool) -> tuple[Other, ...]:

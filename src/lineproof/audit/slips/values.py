@@ -151,6 +151,9 @@ def _loads(line: Line, target: str, name: str) -> Iterator[Other]:
     if symbol in ("b_tr", "s_b"):
         yield other("tributary", 2.0, ", full for half the tributary width")
         yield other("tributary", 0.5, ", half of the tributary width")
+    if symbol == "A_L":
+        yield other("tributary", 2.0, ", full for half the tributary area")
+        yield other("tributary", 0.5, ", half of the tributary area")
     if symbol in ("x_f", "b_sn"):
         said = "the value at the support axis in place of that at the face: {} = 0"
         yield Other("centreline", 0.0, 0.0, partial(_of, line, target, name, said))
