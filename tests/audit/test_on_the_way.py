@@ -15,6 +15,8 @@ from lineproof.audit.slips.search import find_slips
 from lineproof.sheet import Sheet
 
 from .hand import judged, sheet_of, typed
+from .planting_beams import BEAMS
+from .planting_by_hand import judged_by_hand, not_agreeing
 
 LOADS = {"w_sl": "12.96 kN/m", "w_wb": "4.2 kN/m", "w_SD": "5.4 kN/m", "l": "8.4 m"}
 LINES = {"w_D = w_sl + w_wb + w_SD": "kN/m", "R_D = w_D*l/2": "kN"}
@@ -59,6 +61,14 @@ def test_a_number_in_the_middle_may_be_rounded_to_either_side() -> None:
     said = {text: judged(record, {"beam/b_f": text})["beam/b_f"] for text in ("3590", "3610")}
     assert {each.verdict for each in said.values()} == {Verdict.AGREES}
     assert judged(record, {"beam/b_f": "3570"})["beam/b_f"].verdict is not Verdict.AGREES
+
+
+@pytest.mark.parametrize("digits", [3, 4])
+def test_honest_tables_by_hand_hold_no_error(digits: int) -> None:
+    """Quick tables of every twelfth random beam, all lines of it rounded: nothing but agrees."""
+    said = judged_by_hand(range(0, BEAMS, 12), digits)
+    assert len(said) > 1000  # more than forty a beam: no empty count
+    assert not_agreeing(said) == []
 
 
 def test_what_carries_an_error_through_rounded_lines_is_no_origin_of_its_own() -> None:

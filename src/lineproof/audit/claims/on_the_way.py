@@ -7,6 +7,7 @@ that no more than such a value is let pass.
 
 from __future__ import annotations
 
+import math
 from collections.abc import Collection, Iterable
 from typing import NamedTuple
 
@@ -99,14 +100,22 @@ def rounding_note(graph: Graph, judged: Iterable[Judged]) -> str:
 
 
 def _written(form: Form, unit: float, way: _Way) -> Form:
-    """Return a value as it is written; one in the middle between two numbers may be either."""
-    value = abs(form.middle) / unit
-    if not value:
-        return form
-    whole = way.whole and 10**way.digits <= value < _LARGEST_WHOLE
-    number = significant(value, 0 if whole else way.digits)
+    """Return a value as it is written; one that may be either of two numbers lies between them."""
+    low, high = (
+        _number((form.middle + end * form.rest) / unit, way, end) * unit for end in (-1, 1)
+    )
+    return Form((low + high) / 2, form.parts, abs(high - low) / 2)
+
+
+def _number(value: float, way: _Way, end: int) -> float:
+    """Return a number as it is written; one in the middle between two goes towards an end."""
+    size = abs(value)
+    if not size:
+        return value
+    whole = way.whole and 10**way.digits <= size < _LARGEST_WHOLE
+    number = significant(size, 0 if whole else way.digits)
     step = 10.0 ** int(number.as_tuple().exponent)
-    if abs(abs(float(number) - value) - step / 2) <= _TIE * value:
-        return Form(form.middle, form.parts, form.rest + step / 2 * unit)
-    sign = 1.0 if form.middle > 0 else -1.0
-    return Form(sign * float(number) * unit, form.parts, form.rest)
+    off = size - float(number)
+    if abs(abs(off) - step / 2) <= _TIE * size:
+        return value + end * step / 2
+    return math.copysign(float(number), value)

@@ -1,0 +1,48 @@
+"""Honest tables of governing results as worked on paper, where every line is rounded."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from lineproof.audit.claims.blank import quick_lines
+from lineproof.audit.claims.judge import judge
+from lineproof.audit.data import Claim, Judged, Verdict, read_from
+from lineproof.audit.graph import Graph
+from lineproof.quantity.digits import significant
+from lineproof.quantity.units import internal_factor
+
+from .planting_beams import beam
+
+
+def worked(graph: Graph, digits: int) -> list[Claim]:
+    """Return the quick table of a calc of which every line is rounded and carried on so."""
+    values, texts = dict(graph.stored), dict[str, str]()
+    for node in graph:
+        if not node.has_value:
+            continue
+        factor = internal_factor(node.unit)
+        if node.is_computed:
+            number = significant(node.compute(graph.named(node, values)) / factor, digits)
+            texts[node.id] = f"{number:f}"
+            values[node.id] = float(number) * factor
+        else:
+            texts[node.id] = f"{values[node.id] / factor:.10g}"
+    return [_claim(graph, i, texts[i]) for i in quick_lines(graph)]
+
+
+def _claim(graph: Graph, entry_id: str, text: str) -> Claim:
+    unit = graph[entry_id].unit
+    factor = internal_factor(unit)
+    return Claim(entry_id, text, unit, float(text) * factor, read_from(text).times(factor))
+
+
+def judged_by_hand(numbers: Iterable[int], digits: int) -> list[tuple[int, Judged]]:
+    """Judge the honest tables of random beams; return each claim with the number of its beam."""
+    graphs = ((number, beam(number)) for number in numbers)
+    said = ((number, judge(graph, worked(graph, digits))) for number, graph in graphs)
+    return [(number, each) for number, all_ in said for each in all_ if each.claim is not None]
+
+
+def not_agreeing(said: Iterable[tuple[int, Judged]]) -> list[tuple[int, str, str]]:
+    """Return beam, line and verdict of each claim that is said to be something else than right."""
+    return [(n, j.id, str(j.verdict)) for n, j in said if j.verdict is not Verdict.AGREES]
