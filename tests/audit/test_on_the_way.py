@@ -12,6 +12,7 @@ from lineproof.audit.audit import audit_claims
 from lineproof.audit.data import Judged, Verdict
 from lineproof.audit.graph import Graph
 from lineproof.audit.slips.search import find_slips
+from lineproof.formula import formula
 from lineproof.sheet import Sheet
 
 from .hand import judged, sheet_of, typed
@@ -69,6 +70,29 @@ def test_honest_tables_by_hand_hold_no_error(digits: int) -> None:
     said = judged_by_hand(range(0, BEAMS, 12), digits)
     assert len(said) > 1000  # more than forty a beam: no empty count
     assert not_agreeing(said) == []
+
+
+def test_the_slip_behind_a_line_is_found_though_those_above_were_rounded() -> None:
+    """f_r = 0.6 sqrt(30) = 3.286, 3.29: 3.29 x 350 x 650^2/6 = 81.09 for the web alone, "81.1".
+
+    With 3.286 it is 80.99; the T section has 3.286 x 18.6e9/495 = 123.5.
+    """
+    sheet = Sheet("H8", "Cracking")
+    with sheet.part("given", "Given"):
+        for symbol, value in {
+            "b_w": "350 mm", "h": "650 mm", "y_b": "495 mm", "A_c": "28617 mm2", "f_c": "30 MPa",
+        }.items():  # fmt: skip
+            sheet.given(symbol, value)
+    numbers = {"0.6": "MPa^0.5"}
+    with sheet.part("beam", "Span 1"):
+        made = formula("f_r = 0.6*sqrt(f_c)", unit="MPa", numbers=numbers, title="Rupture")
+        sheet.line(made)
+        sheet.line("I_g = A_c*h**2 + b_w*h**3/12 - b_w*h**3/12", unit="mm4")
+        sheet.line("M_cr = f_r*I_g/y_b", unit="kN.m")
+    record = sheet.close()
+    found = judged(record, {"beam/M_cr": "81.1"}, find_slips)["beam/M_cr"]
+    assert found.verdict is Verdict.ORIGIN
+    assert any("the web alone for the whole section" in slip.sentence for slip in found.slips)
 
 
 def test_what_carries_an_error_through_rounded_lines_is_no_origin_of_its_own() -> None:

@@ -11,7 +11,7 @@ from lineproof.audit.claims.copies import stands_alone, without_circles, without
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
-from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay
+from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay, as_rounded
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Worker
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
@@ -28,6 +28,7 @@ from lineproof.audit.claims.worlds import (
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.rank import reproduced, without_underscore
+from lineproof.audit.slips.search import searching
 from lineproof.record.entry import DECISION
 from lineproof.typeset.values import told
 
@@ -95,7 +96,9 @@ class _Judge:
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.numbers = numbers_of(graph, claims, self.worlds)
         self.way = OnTheWay(self.worker, self.claims)
+        self.find_rounded = searching()
         self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
+        self.rounded = as_rounded(graph, self.used, self.claims)
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
         self.turned: dict[str, list[str]] = {}
@@ -330,8 +333,15 @@ class _Judge:
         if self.find is None:
             return ()
         below, stored = set(self.graph.below([node.id])), self.graph.stored
+        found = self.find(self.graph, node.id, self.used, claim, self.typed)
+        known = any(cause.usual for slip in found[:1] for cause in slip.causes)
+        if not known and self.way.is_open(node):
+            # What was worked from lines that nobody shows has the digits of these as well.
+            again = self.find_rounded(self.graph, node.id, self.rounded, claim, self.typed)
+            usual = (s for s in again if any(c.usual and not c.above for c in s.causes))
+            found = (*usual, *found) or again
         slips = without_results(
-            self.find(self.graph, node.id, self.used, claim, self.typed),
+            found,
             claim,
             lambda i: i in below and not self.used[i].holds(stored[i]),
         )

@@ -8,7 +8,7 @@ that no more than such a value is let pass.
 from __future__ import annotations
 
 import math
-from collections.abc import Collection, Iterable
+from collections.abc import Collection, Iterable, Mapping
 from typing import NamedTuple
 
 from lineproof.audit.claims.propagate import Form, Worker, World
@@ -53,7 +53,7 @@ class OnTheWay:
 
     def met(self, world: World, node: Node, stands_for: Interval) -> tuple[Interval, int] | None:
         """Return the first of a line's values that a claim meets, with the digits; None if none."""
-        if not any(map(self._is_open, node.args.values())):
+        if not self.is_open(node):
             return None
         for way in _WAYS:
             try:
@@ -63,6 +63,10 @@ class OnTheWay:
             if stands_for.meets(interval):
                 return interval, way.digits
         return None
+
+    def is_open(self, node: Node) -> bool:
+        """Tell whether a line rests on one, next to it, that nobody claimed."""
+        return any(map(self._is_open, node.args.values()))
 
     def _is_open(self, entry_id: str) -> bool:
         return entry_id not in self.claimed and self.worker.graph[entry_id].is_computed
@@ -82,6 +86,25 @@ class OnTheWay:
             form = self._worked(world, node, above) if above.lines else world.used[node.id]
             self._kept[key] = _written(form, internal_factor(node.unit), way)
         return self._kept[key]
+
+
+def as_rounded(
+    graph: Graph, used: Mapping[str, Interval], claimed: Collection[str]
+) -> dict[str, Interval]:
+    """Return what lines may be where those that nobody claimed were written with three digits."""
+    return {
+        i: _widened(interval, internal_factor(graph[i].unit))
+        if i not in claimed and graph[i].is_computed else interval
+        for i, interval in used.items()
+    }  # fmt: skip
+
+
+def _widened(interval: Interval, unit: float) -> Interval:
+    size = abs(interval.middle) / unit
+    if not size or not math.isfinite(size):
+        return interval
+    half = 10.0 ** (math.floor(math.log10(size)) - 2) / 2 * unit
+    return Interval(interval.low - half, interval.high + half)
 
 
 def rounding_note(graph: Graph, judged: Iterable[Judged]) -> str:

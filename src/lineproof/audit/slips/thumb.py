@@ -37,7 +37,7 @@ _ROWS = (
     ("simple span", "delta_i = 5*w_s*l**4/(384*E_c*I_ea)", "5*w_s*l**4/(384*E_c*I_ea)",
      "a simple span"),
     ("simple span", "delta_i = 5*w_s*l**4/(384*E_c*I_g)", "5*w_s*l**4/(384*E_c*I_g)",
-     "a simple span that is not cracked"),
+     "not cracked"),
     ("thumb", "delta_t = zeta_s*delta_DL", "zeta_s*delta_DL",
      "the deflection under all loads taken as sustained"),
     ("thumb", "delta_at = (zeta_s - zeta_sa)*delta_DL", "(zeta_s - zeta_sa)*delta_DL",
