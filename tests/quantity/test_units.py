@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import subprocess
+import sys
 import time
 from decimal import Decimal
 from typing import Any
@@ -11,7 +13,7 @@ import pytest
 
 from lineproof.errors import UserError
 from lineproof.quantity import UNITS, factor, internal_factor, registry, unit_named
-from lineproof.quantity.units import METRE_SYSTEM, plain_spelling, system_unit
+from lineproof.quantity.units import DEFINITIONS, METRE_SYSTEM, plain_spelling, system_unit
 
 # How pint's default registry, an independent definition of every unit, spells the list.
 PINT_NAMES = {
@@ -78,6 +80,37 @@ def test_published_factors_are_exact(unit: str, into: str, exact: str) -> None:
 )
 def test_published_factors_to_their_digits(unit: str, into: str, published: float) -> None:
     assert float(factor(unit, into)) == pytest.approx(published, rel=5e-7)
+
+
+PAIRS = [(a, b) for a in UNITS.values() for b in UNITS.values() if a.kind == b.kind]
+
+
+@pytest.mark.parametrize("kind", dict.fromkeys(unit.kind for unit in UNITS.values()))
+def test_factors_within_a_kind_are_those_of_pints_exact_decimals(kind: str) -> None:
+    # pint's arithmetic on the same definitions with 28 digits, of which a factor keeps 21.
+    ureg: Any = pint.UnitRegistry(None, non_int_type=Decimal)
+    ureg.load_definitions(DEFINITIONS.splitlines())
+    for unit, into in [pair for pair in PAIRS if pair[0].kind == kind]:
+        theirs = ureg.Quantity(Decimal(1), unit.expression).m_as(into.expression)
+        ours = factor(unit.spelling, into.spelling)
+        assert abs(ours / theirs - 1) < Decimal("1e-20"), (unit, into)
+
+
+def test_there_is_no_factor_between_two_kinds() -> None:
+    with pytest.raises(ValueError, match="'kN' is a force, 'mm' a length"):
+        factor("kN", "mm")
+
+
+def test_a_quantity_is_read_and_converted_without_pint() -> None:
+    code = (
+        "import sys; from lineproof.quantity import read_quantity; "
+        "print(read_quantity('w', '1 ksf', 'kPa').value, 'pint' in sys.modules)"
+    )
+    said = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True)
+    # 1 kip/ft2 = 4448.2216152605 N / (304.8 mm)2 = 0.04788025898 MPa
+    value, loaded = said.stdout.split()
+    assert float(value) == pytest.approx(0.04788025898, rel=1e-9)
+    assert loaded == "False"
 
 
 @pytest.mark.parametrize(

@@ -1,14 +1,15 @@
-"""The closed list of units, and the pint registry that stands behind it.
+"""The closed list of units: exact factors between them, and a pint registry of the same.
 
 pint alone would read ``kn`` as knots, does not know psf, and hangs on hostile text; so only the
-spellings below ever reach it.  Inside the package every value is a float in N, mm, MPa (and
-degrees, kg/m3, hours as such): the *internal unit* of its dimension.
+spellings below ever reach it, and only where units are proved.  Inside the package every value is
+a float in N, mm, MPa (and degrees, kg/m3, hours as such): the *internal unit* of its dimension.
 """
 
 from __future__ import annotations
 
 import difflib
 import re
+from collections.abc import Mapping
 from dataclasses import dataclass
 from decimal import Decimal
 from functools import cache, lru_cache
@@ -19,7 +20,7 @@ from lineproof.errors import UserError
 if TYPE_CHECKING:
     import pint
 
-_DEFINITIONS = """\
+DEFINITIONS = """\
 metre = [length] = m
 kilogram = [mass] = kg
 second = [time] = s
@@ -43,6 +44,7 @@ pound_force = 4.4482216152605 * N = lbf
 kip = 4448.2216152605 * N
 radian = 57.295779513082320876798154814105 * deg = rad
 """
+"""Every unit by those before it, as pint reads definitions."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -149,6 +151,9 @@ _EXAMPLES = "one such as 'mm', 'kN', 'kN.m' or 'MPa'"
 _PLAIN = str.maketrans("·⋅∙•×*²³⁴", "......234")
 """Dots and crosses between units, raised digits."""
 
+_FACTOR = re.compile(r"([*/]?) ?([A-Za-z_]+|[0-9.]+)(?: ?\*\* ?([0-9]))?")
+"""One factor of an expression that pint reads: its sign, its unit or number, its power."""
+
 _BETWEEN_UNITS = re.compile(r"(?<=[A-Za-z])[- ](?=[a-z])")
 """A hyphen or a space between two units, which stands for their product."""
 
@@ -230,28 +235,50 @@ def example_unit(unit: Unit) -> str:
 
 
 @cache
-def registry(number: type[Decimal | float] = float) -> pint.UnitRegistry[Any]:
-    """Return the pint registry of the definitions above, keeping the author's order of units.
+def registry() -> pint.UnitRegistry[Any]:
+    """Return the pint registry of the definitions above, keeping the author's order of units."""
+    import pint  # noqa: PLC0415 - 0.2 s, only needed where units are proved or typed as pint's
 
-    Conversions use the one with exact decimals; unit proofs and notebooks the one with floats,
-    since decimals know no roots.
-    """
-    import pint  # noqa: PLC0415 - 0.2 s, only needed at the border
-
-    ureg: pint.UnitRegistry[Any] = pint.UnitRegistry(None, non_int_type=number)
-    ureg.load_definitions(_DEFINITIONS.splitlines())
+    ureg: pint.UnitRegistry[Any] = pint.UnitRegistry(None)
+    ureg.load_definitions(DEFINITIONS.splitlines())
     ureg.formatter.default_sort_func = None
     return ureg
 
 
 @cache
 def factor(unit: str, into: str) -> Decimal:
-    """Return by what a number in ``unit`` is multiplied to stand in ``into`` (exact decimal)."""
-    ureg = registry(Decimal)
-    one = ureg.Quantity(Decimal(1), UNITS[unit].expression)
-    converted = Decimal(one.to(UNITS[into].expression).magnitude)
-    # Pint multiplies by way of base units; 28 digits leave noise such as 1.000...001.
+    """Return by what a number in ``unit`` is multiplied to stand in ``into`` (exact decimal).
+
+    Raises ``ValueError`` for units of two kinds.
+    """
+    first, second = UNITS[unit], UNITS[into]
+    if first.kind != second.kind:
+        msg = f"{unit!r} is a {first.kind}, {into!r} a {second.kind}"
+        raise ValueError(msg)
+    sizes = _sizes()
+    converted = _size(first.expression, sizes) / _size(second.expression, sizes)
+    # A division leaves noise in the last of 28 digits, such as 1.000...001.
     return converted.quantize(Decimal(1).scaleb(converted.adjusted() - 20)).normalize()
+
+
+@cache
+def _sizes() -> dict[str, Decimal]:
+    """Return how large the units of the definitions above are, in their base units."""
+    sizes = {"dimensionless": Decimal(1)}
+    for line in DEFINITIONS.splitlines():
+        name, made_of, *symbol = line.split(" = ")
+        size = Decimal(1) if made_of.startswith("[") else _size(made_of, sizes)
+        sizes.update(dict.fromkeys((name, *symbol), size))
+    return sizes
+
+
+def _size(expression: str, sizes: Mapping[str, Decimal]) -> Decimal:
+    """Return the product of what stands in an expression such as ``kip/in_l**2``."""
+    size = Decimal(1)
+    for sign, name, power in _FACTOR.findall(expression):
+        one = (sizes[name] if name in sizes else Decimal(name)) ** int(power or 1)
+        size = size / one if sign == "/" else size * one
+    return size
 
 
 @cache
