@@ -8,6 +8,8 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
 
+import numpy as np
+
 from lineproof.beams.continuous.case_forces import FACTORED, SPECIFIED, Names, factor_text
 from lineproof.beams.continuous.groups import named
 from lineproof.beams.continuous.imported_restraint import record_load_terms, span_loads
@@ -46,23 +48,26 @@ def worst_case(model: Model, span: int) -> tuple[float, int]:
         loads = span_loads(model.imported, span)
         row = int(loads.argmax())
         return float(loads[row]), row
-    return max(
-        ((_load(model, span, row), row) for row in range(len(model.forces.cases))),
-        key=lambda pair: (round(pair[0], 9), -pair[1]),
-    )
+    sizes = _loads(model, span)
+    row = max(range(len(sizes)), key=lambda n: (round(sizes[n], 9), -n))
+    return sizes[row], row
 
 
-def _load(model: Model, span: int, row: int) -> float:
+def _loads(model: Model, span: int) -> list[float]:
+    """Return the load of every case on a span [N/mm], single loads smeared."""
     length = model.lengths[span - 1].value
-    factors = _factors(model, span, row)
-    total: float = sum(
-        f * model.uniform[kind, span].value
-        for kind, f in factors.items()
-        if (kind, span) in model.uniform
-    )
+    forces = model.forces
+    columns = zip(forces.solution.rows, forces.factors.T, strict=True)
+    factors = {kind: column for (kind, k), column in columns if k == span}
+    total = np.zeros(len(forces.cases))
+    for kind, column in factors.items():
+        if (kind, span) in model.uniform:
+            total += column * model.uniform[kind, span].value
     for load in model.on_span(span):
-        total += 2 * factors.get(load.kind, 0.0) * load.total / length
-    return total
+        if load.kind in factors:
+            total += 2 * factors[load.kind] * load.total / length
+    made: list[float] = total.tolist()
+    return made
 
 
 def _factors(model: Model, span: int, row: int) -> dict[str, float]:

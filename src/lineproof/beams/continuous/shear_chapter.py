@@ -14,7 +14,7 @@ from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import Developed, bars_of, record_lengths
 from lineproof.beams.continuous.faces import Face as FaceOfSupport
-from lineproof.beams.continuous.faces import faces_of, has_sag, hogging, restrained_supports
+from lineproof.beams.continuous.faces import faces_of, has_sag, hogging
 from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.imported_torsion import record_imported_torsion
 from lineproof.beams.continuous.interface import (
@@ -232,7 +232,7 @@ def _record_interfaces(design: Design) -> None:
             steps = _flange_steps(sheet, model, face.span)
             steps.bind(n_o=held["n_o"], A_b=held.get("A_bo", held["A_b"]))
             steps.bind(M_f=held["M_f"], M_r=held["M_r"])
-            _record_to_inflection(steps, model, face)
+            _record_to_inflection(steps, design, face)
             short = _overhang_in_part(design, face)
             if short is not None:
                 l_av, l_d = record_lengths(steps, short, "the face")
@@ -254,10 +254,10 @@ def _flange_steps(sheet: Sheet, model: Model, span: int) -> Steps:
     return Steps(sheet, place)
 
 
-def _record_to_inflection(steps: Steps, model: Model, face: FaceOfSupport) -> None:
+def _record_to_inflection(steps: Steps, design: Design, face: FaceOfSupport) -> None:
     """Record the length from a face to where the moment of its governing case is zero."""
-    support = face.support
-    if support not in restrained_supports(model):
+    model, support = design.model, face.support
+    if support not in design.designed.restrained:
         record_length(steps, beside_hog(model.forces, support, face.side))
         return
     steps.bind(b_sp=model.sheet.entry(f"{GIVEN}/b_s{support}"), l=model.lengths[face.span - 1])
