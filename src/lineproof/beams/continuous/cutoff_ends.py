@@ -69,10 +69,10 @@ class SideOf:
 
 def whole(designed: Designed, runs: Iterable[BarRun], run: BarRun, towards: End) -> BarRun:
     """Return the last of the like bars that a run is lapped with, one after the other."""
-    kept = tuple(runs)
+    kept = tuple(each for each in runs if alike(each, run))
     pairs = level_pairs(designed.outline, kept, lapped)
     after = dict(pairs) if towards == "right" else {j: i for i, j in pairs}
-    index = next((i for i, other in enumerate(kept) if other is run), -1)
+    index = next((i for i, each in enumerate(kept) if each is run), -1)
     while index in after:
         index = after[index]
     return run if index < 0 else kept[index]

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from functools import cached_property
 from itertools import groupby, pairwise
 
 from lineproof.beams.bars import centre_of
@@ -28,11 +29,11 @@ from lineproof.standards.a23_3.bars import BARS, LAYER_DISTANCE, LEAST_CLEAR
 STROKE = THIN * 1.3
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Steel:
     """What stands at a station of a span: runs, the zone of stirrups, the concrete around.
 
-    ``bars`` are all bars of the beam, which tell how the ``strings`` run on.
+    ``bars`` are all bars of the beam, which tell how strings run on.
     """
 
     outline: BeamOutline
@@ -43,7 +44,11 @@ class Steel:
     bend: float
     aggregate: float
     bars: tuple[BarRun, ...]
-    strings: Strings
+
+    @cached_property
+    def strings(self) -> Strings:
+        """The strings of the beam's bars; only a section that is drawn needs them."""
+        return strings_of(self.outline, self.bars)
 
     @property
     def depth(self) -> float:
@@ -116,8 +121,7 @@ def steel_at(
     size = zone.size if zone else stirrup
     diameter = BARS.number(size, "d_b") if size else 0.0
     bend = stirrup_radius(size) if size else 0.0
-    strings = strings_of(outline, detailing.bars)
-    return Steel(outline, span, runs, zone, diameter, bend, aggregate, detailing.bars, strings)
+    return Steel(outline, span, runs, zone, diameter, bend, aggregate, detailing.bars)
 
 
 def span_of(outline: BeamOutline, x: float) -> int:
