@@ -292,8 +292,9 @@ def provide(
     h = np.array(outline.depths)[index]
     A = np.zeros_like(x)
     lever = np.zeros_like(x)
+    first, last = x.min(initial=np.inf), x.max(initial=-np.inf)
     for bars in standing:
-        if bars.run.face == face:
+        if bars.run.face == face and bars.run.start < last and bars.run.end > first:
             part = bars.run.area * bars.developed(x)
             A += part
             lever += part * bars.distance
