@@ -232,18 +232,17 @@ def inflection(designed: Designed, span: int, near: End, count: int = 101) -> In
     """
     t = np.linspace(half_of(designed, span, near), far_face(designed, span, near), count)
     M, V = designed.forces.along(span, local(designed, span, near, t))
-    found: list[Inflection] = []
     turns = (M[:, :-1] <= NOTHING) & (M[:, 1:] > NOTHING)
-    for row, at in zip(*np.nonzero(turns), strict=True):
-        below, above = M[row, at], M[row, at + 1]
-        part = float(-min(below, 0.0) / (above - min(below, 0.0)))
-        place = round(float(t[at] + part * (t[at + 1] - t[at])))
-        found.append(Inflection(float(place), int(row), abs(float(V[row, at]))))
-    if not found:
+    rows, places = np.nonzero(turns)
+    if not len(rows):
         return None
-    most = max(found, key=lambda point: point.V)
-    _, V_there = designed.forces.pairs(span, local(designed, span, near, most.t))
-    return Inflection(most.t, most.row, abs(float(V_there[most.row])))
+    most = np.abs(V[rows, places]).argmax()
+    row, at = int(rows[most]), int(places[most])
+    below, above = M[row, at], M[row, at + 1]
+    part = float(-min(below, 0.0) / (above - min(below, 0.0)))
+    place = float(round(float(t[at] + part * (t[at + 1] - t[at]))))
+    _, V_there = designed.forces.pairs(span, local(designed, span, near, place))
+    return Inflection(place, row, abs(float(V_there[row])))
 
 
 def held_at_zero(
