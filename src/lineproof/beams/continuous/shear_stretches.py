@@ -284,17 +284,19 @@ def stretches_of(choice: Choice, outline: BeamOutline) -> tuple[ShearStretch, ..
         V_c = np.where(check.plain, v["V_plain"], v["V_c"])
         in_range = v["eps_asked"] <= MOST_STRAIN * (1 + 1e-12)  # beyond it, or without bars, none
         V_r = np.where(in_range, np.minimum(V_c + V_s, v["V_rmax"]), 0.0)
+        # Of both ends of each stretch the weaker: (cases, stretches).
+        both = {"V_r": V_r, "V_s": V_s, "theta": v["theta"]}
+        weaker = {name: np.minimum(each[:, :-1], each[:, 1:]) for name, each in both.items()}
+        rows = {name: each.argmin(axis=0).tolist() for name, each in weaker.items()}
+        least = {name: each.min(axis=0).tolist() for name, each in weaker.items()}
         for i, (start, end) in enumerate(pairwise(columns.tolist())):
-            both = [i, i + 1]
             if end - start > _SHORT:
-                least = {"V_r": V_r[:, both], "V_s": V_s[:, both], "theta": v["theta"][:, both]}
-                rows = {name: int(each.min(axis=1).argmin()) for name, each in least.items()}
                 made.append(
                     ShearStretch(
-                        start, end, _down(least["V_r"].min(), PRINTED_FORCE),
-                        _down(least["V_s"].min(), PRINTED_FORCE),
-                        _down(least["theta"].min(), PRINTED_ANGLE),
-                        {name: str(check.state.cases[row]) for name, row in rows.items()},
+                        start, end, _down(least["V_r"][i], PRINTED_FORCE),
+                        _down(least["V_s"][i], PRINTED_FORCE),
+                        _down(least["theta"][i], PRINTED_ANGLE),
+                        {name: str(check.state.cases[each[i]]) for name, each in rows.items()},
                     )
                 )  # fmt: skip
     return tuple(made)
