@@ -155,7 +155,7 @@ def full_area(designed: Designed, runs: Iterable[BarRun]) -> tuple[float, float]
 
 def moments(designed: Designed, face: Face, span: int, near: End, t: np.ndarray) -> np.ndarray:
     """Return the moments of all cases (cases, t) of a face, positive where it is in tension."""
-    M, _ = designed.forces.along(span, local(designed, span, near, t))
+    M = designed.forces.moments(span, local(designed, span, near, t))
     return M if face == "bottom" else -M
 
 

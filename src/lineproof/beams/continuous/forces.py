@@ -116,8 +116,15 @@ class Forces:
 
     def along(self, span: int, x: Floats, side: Side = "right") -> tuple[Floats, Floats]:
         """Return M and V of every case at stations x: (cases, stations)."""
-        curves = self.solved.solution.span(span)
-        return curves.moment(x), curves.shear(x, side)
+        return self.moments(span, x), self.shears(span, x, side)
+
+    def moments(self, span: int, x: Floats) -> Floats:
+        """Return M of every case at stations x: (cases, stations)."""
+        return self.solved.solution.span(span).moment(x)
+
+    def shears(self, span: int, x: Floats, side: Side = "right") -> Floats:
+        """Return V of every case at stations x: (cases, stations)."""
+        return self.solved.solution.span(span).shear(x, side)
 
     def demand(self, span: int, x: float, side: Side, row: int) -> Demand:
         """Return the pair of one case at one place."""
@@ -148,7 +155,7 @@ class Forces:
         span = support - 1 if side == "left" else support
         start, end = self.beam.faces(span)
         x = end if side == "left" else start
-        M, _ = self.pairs(span, x, side)
+        M = self.moments(span, np.array([x]))
         return self.demand(span, x, side, int(M.argmin()))
 
     def face(self, support: int, side: End) -> tuple[int, float]:

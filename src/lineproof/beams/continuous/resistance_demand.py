@@ -169,7 +169,7 @@ def demand_at(designed: Designed, span: int, local: Floats) -> SpanDemand:
     left, right = designed.forces.beam.faces(span)
     at = np.clip(local, left, right)
     M, V = designed.forces.along(span, at)
-    before = designed.forces.along(span, at, "left")[1]
+    before = designed.forces.shears(span, at, "left")
     V = np.maximum(np.abs(V), np.abs(before))
     axis = designed.outline.axes[span - 1]
     met = stretches_at(designed, local + axis)
@@ -216,7 +216,7 @@ def largest_at(designed: Designed, face: Face, span: int, end: End) -> Demand:
     if designed.cantilever(span):
         a, b = left, right
     x = np.linspace(a, b, 21)
-    M, _ = designed.forces.along(span, x)
+    M = designed.forces.moments(span, x)
     row, column = np.unravel_index(int(M.argmin()), M.shape)
     return designed.forces.demand(span, float(x[column]), end, int(row))
 
