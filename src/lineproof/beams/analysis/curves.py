@@ -60,30 +60,39 @@ class Curves:
         rows = (self.w, self.P, self.M0, self.V0, self.slope0, self.y0)
         return Curves(self.length, self.EI, self.breaks, *(factors @ row for row in rows))
 
-    def _passed(self, x: Floats) -> tuple[Floats, Floats, Floats]:
-        """Return distances from piece starts, loaded lengths passed, distances from breaks."""
+    def _passed(self, x: Floats) -> tuple[Floats, Floats]:
+        """Return distances from piece starts, loaded lengths passed."""
         u = np.maximum(x - self.breaks[:-1, None], 0.0)
-        c = np.minimum(u, np.diff(self.breaks)[:, None])
-        return u, c, np.maximum(x - self.breaks[:, None], 0.0)
+        lengths = self.breaks[1:, None] - self.breaks[:-1, None]
+        return u, np.minimum(u, lengths)
+
+    def _from_breaks(self, x: Floats) -> Floats:
+        """Return distances from the breaks passed."""
+        v: Floats = np.maximum(x - self.breaks[:, None], 0.0)
+        return v
 
     def moment(self, x: Floats) -> Floats:
         """Return M [N.mm] at the stations x: shape (cases, stations)."""
-        u, c, v = self._passed(x)
-        start = self.M0[:, None] + self.V0[:, None] * x
-        moment: Floats = start - self.w @ (c * (u - c / 2)) - self.P @ v
+        u, c = self._passed(x)
+        moment: Floats = self.M0[:, None] + self.V0[:, None] * x - self.w @ (c * (u - c / 2))
+        if self.P.any():
+            moment -= self.P @ self._from_breaks(x)
         return moment
 
     def shear(self, x: Floats, side: Side = "right") -> Floats:
         """Return V [N] at the stations x; beside a point load, on the side asked for."""
-        _, c, _ = self._passed(x)
-        behind = x > self.breaks[:, None] if side == "left" else x >= self.breaks[:, None]
-        shear: Floats = self.V0[:, None] - self.w @ c - self.P @ behind.astype(float)
+        _, c = self._passed(x)
+        shear: Floats = self.V0[:, None] - self.w @ c
+        if self.P.any():
+            behind = x > self.breaks[:, None] if side == "left" else x >= self.breaks[:, None]
+            shear -= self.P @ behind.astype(float)
         return shear
 
     def slope(self, x: Floats) -> Floats:
         """Return the slope [rad] at the stations x."""
         self._deflections_known()
-        u, c, v = self._passed(x)
+        u, c = self._passed(x)
+        v = self._from_breaks(x)
         bent = self.M0[:, None] * x + self.V0[:, None] * x**2 / 2
         bent -= self.w @ (c * (3 * u * (u - c) + c**2) / 6) + self.P @ (v**2 / 2)
         return self.slope0[:, None] - bent / self.EI
@@ -91,7 +100,8 @@ class Curves:
     def deflection(self, x: Floats) -> Floats:
         """Return the deflection [mm] at the stations x."""
         self._deflections_known()
-        u, c, v = self._passed(x)
+        u, c = self._passed(x)
+        v = self._from_breaks(x)
         bent = self.M0[:, None] * x**2 / 2 + self.V0[:, None] * x**3 / 6
         fourth = c * (4 * u**3 - 6 * u**2 * c + 4 * u * c**2 - c**3) / 24
         bent -= self.w @ fourth + self.P @ (v**3 / 6)
