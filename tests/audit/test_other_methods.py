@@ -140,6 +140,18 @@ def test_the_moment_of_inertia_at_midspan_alone() -> None:
     )
 
 
+def test_the_allowance_for_the_stress_of_the_bars() -> None:
+    """500R under 60 mm: the stress is calculated, 0.6 x 500 = 300 MPa may be taken (10.6.1)."""
+    record = spans(exposure="C-1", cover="60 mm", f_c="35 MPa", grade="500R", b_w="450 mm")
+    assert "sag-1/stress-allowance" in record.entries
+    verdict, note = said_of(record, "sag-1/f_s", "300 MPa")
+    assert verdict is Verdict.OTHER_METHOD
+    assert "0.6 f_y" in note
+    z = 300 * (value(record, "sag-1/d_c") * value(record, "sag-1/A_e")) ** (1 / 3)
+    assert said_of(record, "sag-1/z", f"{z:.0f} N/mm")[0] is Verdict.OTHER_METHOD
+    assert said_of(record, "sag-1/f_s", "250 MPa")[0] is Verdict.ORIGIN  # 0.5 f_y is none
+
+
 # -- tables of a handbook ----------------------------------------------------------------------
 
 

@@ -17,6 +17,7 @@ from lineproof.formula import names_of, parse_line
 from lineproof.formula.compiled import NOT_COMPUTED, compile_tree
 from lineproof.quantity.digits import significant
 from lineproof.record.entry import LINE, LOOKUP
+from lineproof.standards.a23_3 import crack_control
 
 _PAIRS = {
     "beta": "beta_g", "theta": "theta_g", "V_c": "V_cg", "V_s": "V_sg", "V_r": "V_rg",
@@ -238,6 +239,17 @@ def _midspan_inertia(bench: Bench, node: Node) -> Iterator[Other]:
             yield from bench.by(node, swapped, sentence, (f"{part}/I_em",))
 
 
+def _stress_allowance(bench: Bench, node: Node) -> Iterator[Other]:
+    """Take 0.6 f_y for z where the stress under specified loads is recorded."""
+    for part in _parts_above(bench, node, "f_s"):
+        asked = bench.graph.nodes.get(f"{part}/{crack_control.ALLOWANCE_DOES.key}")
+        if asked is not None:  # the allowance is not enough, but may be taken
+            f_y = bench.world.used[asked.args["f_y"]]
+            sentence = "follows with 0.6 f_y for the stress of the bars, which 10.6.1 allows"
+            swapped = {f"{part}/f_s": combined(crack_control.STRESS_ALLOWANCE.function, [f_y])}
+            yield from bench.by(node, swapped, sentence)
+
+
 def _table_resistance(bench: Bench, node: Node) -> Iterator[Other]:
     """M_r = K_r b d^2 with K_r read from a table to two digits."""
     if node.symbol != "M_r" or node.unit not in ("kN.m", "N.mm", "kip.ft", "kip.in"):
@@ -305,6 +317,6 @@ def _coefficients(bench: Bench, node: Node) -> Iterator[Other]:
 
 
 _WAYS: tuple[Callable[[Bench, Node], Iterator[Other]], ...] = (
-    _shear, _development, _modulus, _midspan_inertia, _table_resistance, _table_ratio,
-    _coefficients,
+    _shear, _development, _modulus, _midspan_inertia, _stress_allowance, _table_resistance,
+    _table_ratio, _coefficients,
 )  # fmt: skip
