@@ -7,9 +7,10 @@ went wrong; a number behind it takes every so many beams only, a second one is a
 from __future__ import annotations
 
 import argparse
+import math
 import sys
 from collections import Counter
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 
 from lineproof.audit.claims.judge import judge
@@ -19,7 +20,7 @@ from lineproof.audit.slips.search import find_slips
 
 from .planting import Sheet, sheets, told_at
 from .planting_beams import BEAMS, beam
-from .planting_quick import Quick, quick_tables
+from .planting_quick import Quick, quick_tables, reach
 from .planting_rows import KINDS
 from .planting_slips import Planted
 
@@ -30,6 +31,8 @@ ROUNDINGS = (Verdict.SAFE_ROUNDING, Verdict.UNSAFE_ROUNDING)
 READINGS = (Verdict.OTHER_METHOD, *ROUNDINGS)
 """What is said of a number that has a reading besides a slip, where no likely slip fits."""
 FIRST = 3
+DIGITS = 3
+"""Digits to which claims are rounded, and lines between by hand."""
 QUICK_EVERY = 3
 """Every third beam is judged by its quick table too."""
 
@@ -89,10 +92,22 @@ class Tally:
         return True
 
 
+def _within_roundings(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> bool:
+    """Tell whether rounding the lines between by hand, to the digits of the claims, gives it."""
+    return reach(graph, entry_id, claims, DIGITS).meets(claims[entry_id].stands_for)
+
+
 def _is_round(judged: Judged) -> bool:
-    """Tell whether a number of three digits is round: it ends in 0, a size in millimetres in 5."""
+    """Tell whether a number of three digits is round, or the right one cut off after its third.
+
+    Round is what ends in 0, a size in millimetres in 5.
+    """
     if judged.claim is None or judged.verdict not in ROUNDINGS:
         return False
+    typed = float(judged.claim.typed)
+    right = typed * judged.follows.middle / judged.claim.value
+    if 0 <= abs(right) - abs(typed) < 10.0 ** (math.floor(math.log10(abs(right))) + 1 - DIGITS):
+        return True
     digits = f"{float(judged.claim.typed):.2e}".partition("e")[0]
     return digits.endswith("0") or (judged.claim.unit == "mm" and digits.endswith("5"))
 
@@ -163,7 +178,10 @@ def _count_quick(tally: Tally, number: int, graph: Graph, table: Quick) -> None:
         tally.planted[slip.kind] += 1
         origins = [said[i] for i in table.shows_at if said[i].verdict in FOUND]
         told = bool(origins) or any(tally.another(slip, said[i], what) for i in table.shows_at)
-        if not told or any(said[i].verdict is Verdict.AGREES for i in table.shows_at):
+        if not told or any(
+            said[i].verdict is Verdict.AGREES and not _within_roundings(graph, i, claims)
+            for i in table.shows_at
+        ):
             tally.missed.append(f"{what}{[(i, str(said[i].verdict)) for i in table.shows_at]}")
         if origins:
             tally.found[slip.kind] += 1

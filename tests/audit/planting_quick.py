@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
@@ -61,10 +62,11 @@ def behind(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> set[str]
     return found
 
 
-def reach(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> Interval:
+def reach(graph: Graph, entry_id: str, claims: Mapping[str, Claim], digits: int = 0) -> Interval:
     """Return what a claimed line can be if those above it are anywhere in what they stand for.
 
-    Each of them goes to its ends alone, the others stay; the moves are summed.
+    Each of them goes to its ends alone, the others stay; the moves are summed. With ``digits``
+    the lines between, which nobody claimed, are rounded to so many as well.
     """
     inner = behind(graph, entry_id, claims)
     order = [i for i in graph.nodes if i in inner]
@@ -74,7 +76,7 @@ def reach(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> Interval:
     def worked(changed: Mapping[str, float]) -> float:
         values = dict(graph.stored) | typed | dict(changed)
         for i in order:
-            if graph[i].is_computed:
+            if graph[i].is_computed and i not in changed:
                 values[i] = graph[i].compute(graph.named(graph[i], values))
         return values[entry_id]
 
@@ -82,6 +84,12 @@ def reach(graph: Graph, entry_id: str, claims: Mapping[str, Claim]) -> Interval:
     low = high = middle
     for i in used:
         ends = [worked({i: e}) for e in (claims[i].stands_for.low, claims[i].stands_for.high)]
+        low += min(*ends, middle) - middle
+        high += max(*ends, middle) - middle
+    for i in order if digits else ():
+        value = graph.stored[i] if graph[i].is_computed and i != entry_id else 0.0
+        half = 0.5 * 10.0 ** (math.floor(math.log10(abs(value))) + 1 - digits) if value else 0.0
+        ends = [worked({i: value - half}), worked({i: value + half})] if half else [middle]
         low += min(*ends, middle) - middle
         high += max(*ends, middle) - middle
     return Interval(low, high)
