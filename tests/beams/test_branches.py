@@ -148,6 +148,28 @@ def test_layers_of_two_sizes() -> None:
     )
 
 
+def test_the_stress_of_the_bars_where_the_allowance_does_not_do() -> None:
+    """4-25M of 500 MPa under 60 mm: 0.6 x 500 (83.9 x 15 941)^(1/3) = 33 050 > 25 000 N/mm."""
+    record = record_of(
+        bottom_bars="4-25M", exposure="C-1", cover="60 mm", grade="500R", f_c="35 MPa"
+    )
+    assert not holds(record, "crack-control/stress-allowance")
+    assert_by_hand(
+        record,
+        {
+            "crack-control/w_s1": "20.374 + 14.88 = 35.254",
+            "crack-control/M_s": "35.254*7.6**2/8 = 254.53",
+            "crack-control/n_E": "200000/(4500*35**0.5) = 7.5125",
+            "crack-control/kd": "4.84677*((1 + 2*536.1/4.84677)**0.5 - 1) = 67.40",
+            "crack-control/f_s": "7.5125*254.53e6*(536.1 - 67.40)/3.617e9 = 247.8",
+        },
+    )
+    z = 247.78 * (83.9 * 15941) ** (1 / 3)
+    assert number(record, "crack-control/z") == pytest.approx(z, rel=2e-4)
+    I_cr = 3100 * 67.40**3 / 3 + 7.5125 * 2000 * (536.1 - 67.40) ** 2
+    assert number(record, "crack-control/I_cr") == pytest.approx(I_cr, rel=2e-4)
+
+
 def test_block_in_the_web_of_a_beam() -> None:
     """Thin narrow flange, much steel: flange and web apart, both paths within 0.1 %."""
     record = record_of(**THIN)

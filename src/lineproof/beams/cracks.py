@@ -8,12 +8,14 @@ from collections.abc import Callable
 from lineproof.beams.bars import BarLayers
 from lineproof.beams.flexure import midspan
 from lineproof.beams.inputs import FloorBeamInputs
-from lineproof.beams.steps import Steps
+from lineproof.beams.loading import LOADS
+from lineproof.beams.steps import Steps, only
 from lineproof.formula import Formula
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 from lineproof.standards.a23_3 import bars, deflection
 from lineproof.standards.a23_3 import crack_control as clause
+from lineproof.standards.nbc import combinations
 
 CRACKS = "crack-control"
 SKIN_BAR = "10M"
@@ -23,8 +25,17 @@ def record_cracks(sheet: Sheet, inputs: FloorBeamInputs, layers: BarLayers) -> N
     """Record z at midspan and the skin reinforcement of deep beams."""
     steps = midspan(sheet, inputs.shape)
     with sheet.part(CRACKS, "Crack control and skin reinforcement"):
-        cracks_inside(steps, inputs.exposure, layers)
+        loaded = any(part.key == LOADS for part in sheet.parts)
+        cracks_inside(steps, inputs.exposure, layers, stress=_simple_span if loaded else None)
         skin_inside(steps, inputs.exposure)
+
+
+def _simple_span(steps: Steps) -> None:
+    """Record the stress at midspan of a simple span under dead and live load."""
+    sheet = steps.sheet
+    w_s1 = sheet.line(combinations.SERVICE_1, **only(sheet.entries_of(LOADS), ("w_D", "w_L")))
+    steps.line(deflection.MOMENT_SIMPLE, symbol="M_s", w_s=w_s1)
+    stress_inside(steps, steps.entry("A_s"))
 
 
 def exposure_kind(exposure: str) -> str:
