@@ -1,4 +1,7 @@
-"""Honest tables of governing results as worked on paper, where every line is rounded."""
+"""Honest tables of governing results as worked on paper, where every line is rounded.
+
+``python -m tests.audit.planting_by_hand`` from the root of the project prints what is said of them.
+"""
 
 from __future__ import annotations
 
@@ -11,7 +14,7 @@ from lineproof.audit.graph import Graph
 from lineproof.quantity.digits import significant
 from lineproof.quantity.units import internal_factor
 
-from .planting_beams import beam
+from .planting_beams import BEAMS, beam
 
 
 def worked(graph: Graph, digits: int) -> list[Claim]:
@@ -46,3 +49,10 @@ def judged_by_hand(numbers: Iterable[int], digits: int) -> list[tuple[int, Judge
 def not_agreeing(said: Iterable[tuple[int, Judged]]) -> list[tuple[int, str, str]]:
     """Return beam, line and verdict of each claim that is said to be something else than right."""
     return [(n, j.id, str(j.verdict)) for n, j in said if j.verdict is not Verdict.AGREES]
+
+
+if __name__ == "__main__":
+    for digits in (3, 4):
+        said = judged_by_hand(range(0, BEAMS, 12), digits)
+        wrong = not_agreeing(said)
+        print(f"{digits} digits: {len(said)} numbers, not agreeing {len(wrong)}", *wrong, sep="\n")  # noqa: T201
