@@ -1,9 +1,12 @@
-"""Words put together to sentences: the capital at their beginning, and how many of a thing."""
+"""Words put together to sentences: the capital at their beginning, how many, lists cut short."""
 
 from __future__ import annotations
 
 import re
+from collections.abc import Iterable
 
+MOST_LISTED = 6
+"""So many items of a list stand in a sentence, unless told otherwise."""
 _LETTER = "[a-zà-öø-ÿœ]"
 _WORD = re.compile(rf"{_LETTER}{{2,}}(?:[-'’]{_LETTER}+)*[,:;.]?(?=\s|\Z)")
 """A plain word, of a user too. ``d``, ``k_3``, ``λ``, ``f'c`` and ``sag-1/d`` are none."""
@@ -34,3 +37,14 @@ def counted(number: int, one: str, many: str = "") -> str:
     ('1 line', '0 lines', '3 lines carry')
     """
     return f"{number} {one if number == 1 else many or one + 's'}"
+
+
+def listed(items: Iterable[str], most: int = MOST_LISTED, between: str = ", ") -> str:
+    """Return items as a list in a sentence, cut after the first few.
+
+    >>> listed(["2.8", "3.1", "4.2"], 2), listed(["2.8", "3.1"], 2)
+    ('2.8, 3.1 and 1 more', '2.8, 3.1')
+    """
+    held = list(items)
+    rest = len(held) - most
+    return between.join(held[:most]) + (f" and {rest} more" if rest > 0 else "")

@@ -30,7 +30,7 @@ from lineproof.package import Package, build_package, to_html, to_pdf
 from lineproof.package.files import table_csv
 from lineproof.package.words import AUDIT_REPORT
 from lineproof.record import Record
-from lineproof.sentences import begun
+from lineproof.sentences import begun, listed
 from lineproof.sheet import Sheet
 from lineproof.typeset.values import number_text, unit_text
 
@@ -194,8 +194,7 @@ class Report:
         labels = [label for each in ids if (label := self._label(each))]
         if not labels:
             return ""
-        more = len(labels) - 6
-        told = ", ".join(labels[:6]) + (f" and {more} more" if more > 0 else "")
+        told = listed(labels)
         return f"line {told}" if len(labels) == 1 else f"lines {told}"
 
     def _label(self, entry_id: str) -> str:

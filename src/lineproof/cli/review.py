@@ -21,6 +21,7 @@ from lineproof.notebook.reviews import (
     review_inside,
 )
 from lineproof.record import Record
+from lineproof.sentences import listed
 from lineproof.typeset import printable
 
 if TYPE_CHECKING:
@@ -126,9 +127,7 @@ def _told(review: Review, record: Record, stands: Standing) -> Iterator[str]:
 
 
 def _labels(record: Record, ids: Iterable[str]) -> str:
-    labels = [record.entries[line]["label"] or line for line in ids]
-    more = f" and {len(labels) - MOST_NAMED} more" if len(labels) > MOST_NAMED else ""
-    return ", ".join(labels[:MOST_NAMED]) + more
+    return listed((record.entries[line]["label"] or line for line in ids), MOST_NAMED)
 
 
 def _merge_conflicts(made: Merged, stands: Standing) -> Iterator[str]:

@@ -22,6 +22,7 @@ from lineproof.notebook.cells import cells_of, data_of, joined, load_notebook
 from lineproof.notebook.read import calc_of
 from lineproof.notebook.records import altered_lines, read_records
 from lineproof.record import MIME, Record
+from lineproof.sentences import listed
 
 if TYPE_CHECKING:
     from lineproof.sheet import Sheet
@@ -115,10 +116,7 @@ _COMPARED = (
 
 
 def _listed(said: str, names: Sequence[str]) -> str:
-    more = len(names) - _MOST_LISTED
-    if not names:
-        return ""
-    return f"{said}: {', '.join(names[:_MOST_LISTED])}{f' and {more} more' if more > 0 else ''}."
+    return f"{said}: {listed(names, _MOST_LISTED)}." if names else ""
 
 
 def picked(records: Sequence[Record], path: Path, calc: str | None) -> Record:
@@ -157,10 +155,9 @@ def _refuse_altered(record: Record, path: Path) -> None:
     """Refuse to judge claims by a record that does not follow from its own inputs."""
     altered = altered_lines(record)
     if altered:
-        first = "; ".join(altered[:_MOST_NAMED])
-        more = f" and {len(altered) - _MOST_NAMED} more" if len(altered) > _MOST_NAMED else ""
+        first = listed(altered, _MOST_NAMED, "; ")
         raise UserError(
-            f"{path}: {record.calc_id} does not follow from its own inputs ({first}{more}); claims "
+            f"{path}: {record.calc_id} does not follow from its own inputs ({first}); claims "
             "are judged by a right calculation only, so audit this one without --claims first"
         )
 

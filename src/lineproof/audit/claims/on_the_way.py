@@ -18,7 +18,7 @@ from lineproof.errors import UserError
 from lineproof.formula.compiled import NOT_COMPUTED
 from lineproof.quantity.digits import significant
 from lineproof.quantity.units import internal_factor
-from lineproof.sentences import counted
+from lineproof.sentences import counted, listed
 
 FOLLOWS = "follows where lines that are not claimed are rounded to"
 """How the note begins of a line that agrees so."""
@@ -112,9 +112,7 @@ def rounding_note(graph: Graph, judged: Iterable[Judged]) -> str:
     found = [each.id for each in judged if each.note.startswith(FOLLOWS)]
     if not found:
         return ""
-    named = ", ".join(f"{graph[i].symbol} ({graph[i].label})" for i in found[:_MOST_NAMED])
-    more = len(found) - _MOST_NAMED
-    named += f" and {more} more" if more > 0 else ""
+    named = listed((f"{graph[i].symbol} ({graph[i].label})" for i in found), _MOST_NAMED)
     follow = counted(len(found), "claim follows", "claims follow")
     return (
         f"{follow} where lines that are not claimed are rounded to three or four digits, as by "

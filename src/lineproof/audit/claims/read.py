@@ -23,6 +23,7 @@ from lineproof.audit.effects import place_of
 from lineproof.audit.graph import Graph, Node
 from lineproof.errors import MOST_FAULTS, UserError
 from lineproof.quantity import echo, internal_factor
+from lineproof.sentences import listed
 
 CLAIMED = ("claimed", "value")
 NAMES = ("id", "label", "symbol")
@@ -179,11 +180,10 @@ class _Reader:
         if len(nodes) == 1:
             return nodes[0]
         shown = nodes or self.symbols[symbol]
-        ids = ", ".join(node.id for node in shown[:_MOST_PLACES])
-        more = f" and {len(shown) - _MOST_PLACES} more" if len(shown) > _MOST_PLACES else ""
+        ids = listed((node.id for node in shown), _MOST_PLACES)
         at = f" at {echo(place)}" if place else ""
         count = f"stands in {len(nodes)} places" if nodes else "stands nowhere"
-        self.faults.at(row.number, column, f"{symbol} {count}{at}; write one of {ids}{more}")
+        self.faults.at(row.number, column, f"{symbol} {count}{at}; write one of {ids}")
         return None
 
     def _at(self, place: str, nodes: list[Node]) -> list[Node]:

@@ -13,6 +13,7 @@ from typing import TYPE_CHECKING
 from lineproof.audit.claims.rich_text import rich_text_faults
 from lineproof.audit.claims.shown import shown_number
 from lineproof.errors import UserError
+from lineproof.sentences import listed
 
 if TYPE_CHECKING:
     from openpyxl.cell.cell import Cell
@@ -163,11 +164,9 @@ def _rows(rows: Iterator[tuple[Cell, ...]], name: str) -> Iterator[list[str]]:
             if cell.value is not None and cell.has_style and cell.font.strike
         ]  # fmt: skip
     if struck:
-        shown = ", ".join(struck[:_MOST_TOLD])
-        more = f" and {len(struck) - _MOST_TOLD} more" if len(struck) > _MOST_TOLD else ""
         raise UserError(
-            f"{name}: {shown}{more} struck out; empty the cells that are not claimed, or take the "
-            "line through them off"
+            f"{name}: {listed(struck, _MOST_TOLD)} struck out; empty the cells that are not "
+            "claimed, or take the line through them off"
         )
 
 

@@ -16,12 +16,13 @@ from lineproof.audit.junior.cells import PARAMETERS
 from lineproof.audit.junior.formula import Hand, Lookup, judged
 from lineproof.audit.junior.givens import RESULTS
 from lineproof.audit.junior.python import Assigned, Code, assigned, recorded, written
-from lineproof.audit.junior.scope import Scope, finding, listed, name_of, printed, units_of
+from lineproof.audit.junior.scope import Scope, finding, name_of, printed, units_of
 from lineproof.errors import UserError
 from lineproof.formula import Name, Tree, names_of, parse_line
 from lineproof.quantity.digits import significant
 from lineproof.quantity.units import UNITS, internal_factor, plain_spelling, units_of_kind
 from lineproof.record.entry import GIVEN, LOOKUP
+from lineproof.sentences import listed
 from lineproof.standards.catalogue import NOTATION
 
 MOST = 60

@@ -8,8 +8,9 @@ from typing import Any
 
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.junior.cells import CODE, Cell
-from lineproof.audit.junior.scope import VALIDATION, Scope, finding, listed
+from lineproof.audit.junior.scope import VALIDATION, Scope, finding
 from lineproof.record.entry import NOTE
+from lineproof.sentences import listed
 from lineproof.standards.codes import CODE_PAIRS
 from lineproof.standards.references import BASES
 

@@ -11,11 +11,12 @@ from lineproof.audit.graph import Node, Number, evaluated
 from lineproof.audit.junior.catalogue import Compared, Said, catalogue_of, compared, likeness
 from lineproof.audit.junior.edits import plain, replaced
 from lineproof.audit.junior.foreign import foreign_rule
-from lineproof.audit.junior.scope import finding, listed, name_of, shown_in
+from lineproof.audit.junior.scope import finding, name_of, shown_in
 from lineproof.formula import Formula, Name, Tree, names_of
 from lineproof.formula import Number as Constant
 from lineproof.formula.tree import numbers_of
 from lineproof.quantity.units import UNITS, internal_factor
+from lineproof.sentences import listed
 
 PLAIN = frozenset(
     [0, 0.25, 0.5, 0.75, 1.5, 2.5, *range(1, 17), 18, 20, 24, 48, 50, 64, 96, 100, 384]

@@ -9,7 +9,8 @@ from collections.abc import Iterator, Sequence
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.junior.arithmetic import last_name
 from lineproof.audit.junior.python import Code
-from lineproof.audit.junior.scope import finding, listed
+from lineproof.audit.junior.scope import finding
+from lineproof.sentences import listed
 
 _BARE = frozenset(["eval", "exec", "compile", "__import__", "globals", "get_ipython"])
 """Functions of Python by which code does more than calculate."""

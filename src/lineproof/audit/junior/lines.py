@@ -12,10 +12,11 @@ from lineproof.audit.junior.catalogue import catalogue_of, is_of_catalogue
 from lineproof.audit.junior.edits import plain, text_of
 from lineproof.audit.junior.formula import Hand, judged
 from lineproof.audit.junior.sample import constant_ratio, equal, points_for, sampled
-from lineproof.audit.junior.scope import VALIDATION, Scope, finding, listed, name_of, units_of
+from lineproof.audit.junior.scope import VALIDATION, Scope, finding, name_of, units_of
 from lineproof.formula import Criterion, Tree, names_of, parse_line
 from lineproof.formula.tree import Call, numbers_of, walk
 from lineproof.record.entry import CRITERIA, LINE
+from lineproof.sentences import listed
 from lineproof.standards.catalogue import criteria
 from lineproof.standards.references import MECHANICS
 

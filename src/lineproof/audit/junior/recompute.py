@@ -6,7 +6,7 @@ from collections.abc import Container, Iterable, Iterator
 
 from lineproof.audit.data import Finding, Severity
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.junior.scope import finding, listed, name_of, printed
+from lineproof.audit.junior.scope import finding, name_of, printed
 from lineproof.errors import UserError
 from lineproof.quantity import read_quantity
 from lineproof.quantity.units import internal_factor, system_unit
@@ -15,6 +15,7 @@ from lineproof.record.entry import CHECK, GIVEN, LOOKUP
 from lineproof.record.printed_checks import rounds_to
 from lineproof.record.procedures import recall
 from lineproof.record.recompute import Difference, close, recompute
+from lineproof.sentences import listed
 from lineproof.standards.catalogue import tables
 from lineproof.typeset.values import told
 

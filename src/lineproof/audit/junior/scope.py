@@ -16,7 +16,6 @@ SOURCE = "notebook"
 """Where these findings come from."""
 VALIDATION = "predictions against published values"
 """The kind of a calculation that follows other codes on purpose."""
-_MOST_SHOWN = 6
 
 
 class Scope:
@@ -101,13 +100,6 @@ def units_of(record: Record) -> dict[str, str]:
     """Return the unit of every symbol of a record."""
     found = {row["id"]: row["unit"] for row in record.data["notation"]}
     return {symbol: unit for symbol, unit in found.items() if unit in UNITS}
-
-
-def listed(items: Iterable[str], most: int = _MOST_SHOWN) -> str:
-    """Return items as a list in a sentence, cut after the first few."""
-    held = list(items)
-    rest = len(held) - most
-    return ", ".join(held[:most]) + (f" and {rest} more" if rest > 0 else "")
 
 
 def finding(

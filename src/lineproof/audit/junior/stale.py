@@ -13,12 +13,13 @@ from lineproof.audit.junior.arithmetic import symbol_of
 from lineproof.audit.junior.cells import CODE, PARAMETERS, Cell
 from lineproof.audit.junior.code import set_in_cells
 from lineproof.audit.junior.python import Code, Recorded, assigned, recorded
-from lineproof.audit.junior.scope import Scope, finding, listed, name_of
+from lineproof.audit.junior.scope import Scope, finding, name_of
 from lineproof.audit.junior.when import When
 from lineproof.errors import UserError
 from lineproof.quantity import read_quantity
 from lineproof.record.entry import CRITERIA, GIVEN, LINE
 from lineproof.record.recompute import close
+from lineproof.sentences import listed
 
 RUN_ALL = "run all cells from the top, then save"
 _WHEN = {

@@ -22,7 +22,7 @@ from lineproof.audit.review.read import is_day
 from lineproof.errors import UserError
 from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, FOUND, GIVEN, LOOKUP, VALUES
-from lineproof.sentences import counted
+from lineproof.sentences import counted, listed
 from lineproof.typeset.values import is_number, told
 
 INPUTS = (GIVEN, LOOKUP, FOUND)
@@ -222,7 +222,8 @@ class Standing:
     def open_items(self) -> tuple[str, ...]:
         """Say what keeps the calc from being signed off, lines by their numbers in print."""
         told = [
-            f"{counted(len(lines), 'line')} {what}: {_some(self.labels[line] for line in lines)}"
+            f"{counted(len(lines), 'line')} {what}: "
+            f"{listed((self.labels[line] for line in lines), MOST_NAMED)}"
             for lines, what in (
                 (self.unmarked, "not marked"),
                 (self.stale, "marked before a change"),
@@ -232,7 +233,9 @@ class Standing:
         ]
         if self.open_findings:
             numbers = [str(number) for number in self.open_findings]
-            told.append(f"{counted(len(numbers), 'finding')} not closed: {_some(numbers)}")
+            told.append(
+                f"{counted(len(numbers), 'finding')} not closed: {listed(numbers, MOST_NAMED)}"
+            )
         return (*told, *(f"conflict: {self._numbered(each)}" for each in self.conflicts))
 
     def _numbered(self, each: Conflict) -> str:
@@ -268,12 +271,6 @@ def _state(marks: Iterable[Mark], need: Kind, digest: str) -> str:
         if any(m.state is state and m.kind is need and m.digest == digest for m in marks):
             return str(state.value)
     return "stale" if any(mark.digest != digest for mark in marks) else "unmarked"
-
-
-def _some(names: Iterable[str]) -> str:
-    names = list(names)
-    more = f" and {len(names) - MOST_NAMED} more" if len(names) > MOST_NAMED else ""
-    return f"{', '.join(names[:MOST_NAMED])}{more}"
 
 
 def originators(record: Record) -> tuple[str, ...]:

@@ -25,6 +25,7 @@ from lineproof.errors import UserError
 from lineproof.package import to_pdf
 from lineproof.package.read import silent
 from lineproof.record import Record
+from lineproof.sentences import listed
 
 _FOOTER = re.compile(r"Record ([0-9a-f]{16}[0-9a-f ]*…?)\Z")
 ANOTHER_VERSION = (
@@ -105,10 +106,7 @@ def _over(owns: Sequence[_Own], page: int, box: Box) -> str:
     if own is None:
         return ""
     lines = lines_under(box, own.pages.index(page), own.marks, lines_of(own.sources))
-    if not lines:
-        return ""
-    more = f" and {len(lines) - _MOST_LINES} more" if len(lines) > _MOST_LINES else ""
-    return f", over line {', '.join(lines[:_MOST_LINES])}{more}"
+    return f", over line {listed(lines, _MOST_LINES)}" if lines else ""
 
 
 def _fits(page: _Own, home: _Own) -> bool:
