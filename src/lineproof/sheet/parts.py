@@ -42,6 +42,9 @@ class Parts:
             raise UserError(msg)
         check_key(key)
         if self._chapter is not None:
+            if key in self._chapter:  # the first would be gone, with its checks
+                msg = f"part {key!r} is made twice by one call"
+                raise AssertionError(msg)
             self._chapter[key] = None
         part = Part(key, title)
         self._forget(key)

@@ -211,11 +211,11 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
     designed, sheet = writers.designed, writers.sheet
     near, t = _near(writers, station)
     end = _end(designed, station, sum(designed.forces.beam.faces(station.span)) / 2)
-    d_v = _section(laid, station, end, key)["d_v"]
+    section = _section(laid, station, end, key)
     side = demand_at(designed, station.span, np.array([station.local])).side(face)
     inside = t < half_of(designed, station.span, near)
     capped = inside or float(side.free[0]) > float(side.cap[0])
-    cap = _record_cap(laid, station, end, key) if capped else None
+    cap = _record_cap(laid, station, end, key, section["d"]) if capped else None
     with sheet.part(key, title):
         steps = _developed(laid, station)
         x = _record_place(writers, station, near, t)
@@ -223,7 +223,7 @@ def record_tension(laid: Laid, station: Station, key: str, title: str) -> None:
         writers.forces(steps, demand, near, x)
         _record_shear(writers, steps, station.x - station.local + demand.x)
         helps = demand.M > 0 if face == "bottom" else demand.M < 0
-        steps.bind(d_v=d_v)
+        steps.bind(d_v=section["d_v"])
         steps.line(shear_bars.TENSION_SIDE if helps else clause.TENSION_OTHER_SIDE)
         if cap is None:
             laid.check(steps, shear_bars.TENSION_SIDE_HOLDS, station, tension=True)
@@ -288,11 +288,10 @@ def _section(laid: Laid, station: Station, end: End, key: str) -> dict[str, Entr
     return sheet.entries_of(f"{key.removesuffix('-tension')}-section")
 
 
-def _record_cap(laid: Laid, station: Station, end: End, key: str) -> Entry:
-    """Record the steel that the largest moment of the face needs alone; return A_sr."""
+def _record_cap(laid: Laid, station: Station, end: End, key: str, d: Entry) -> Entry:
+    """Record the steel that the largest moment of the face needs alone, at d; return A_sr."""
     writers, face = laid.writers, station.face
     sheet, designed = writers.sheet, writers.designed
-    section = _section(laid, station, end, key)
     demand = largest_at(designed, face, station.span, end)
     length = designed.outline.lengths[station.span - 1]
     near: End = "left" if demand.x <= length / 2 else "right"
@@ -302,7 +301,7 @@ def _record_cap(laid: Laid, station: Station, end: End, key: str) -> Entry:
     title = f"{face.capitalize()} bars: what the largest moment of span {station.span} needs alone"
     with sheet.part(f"{key.removesuffix('-tension')}-largest", title):
         steps = begin(writers, sheet, station.span, face)
-        steps.bind(d=section["d"])
+        steps.bind(d=d)
         x = sheet.given("x_st", plain(t, "mm"), source="place of the largest moment")
         writers.forces(steps, demand, near, x)
         flanged = face == "bottom" and designed.outline.h_f > 0
