@@ -89,6 +89,13 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "f_c": "40 MPa", "grade": "500W", "superimposed": "1.8 kPa", "use": "residential area",
         "cover": "40 mm", "density": "semi-low", "gamma_c": "2000 kg/m3", "gamma_w": "21 kN/m3",
     },
+    "top bars of a shallow end that run on into a deeper span": {  # 1.3 times the length there
+        "spans": ["1.1 m", "5.3 m"], "supports": ["free", "wall 600 mm", "column 300 mm"],
+        "h": ["500 mm", "300 mm"], "b_w": "470 mm", "shape": "rectangular", "h_f": None,
+        "floor_weight": "4.6 kPa", "spacing": "2.2 m", "f_c": "40 MPa", "grade": "400W",
+        "superimposed": "2.7 kPa", "use": "office", "fire_rating": "1 h", "cover": "60 mm",
+        "loads": [{"type": "D", "span": 1, "point": "90 kN", "at": "0.38 m", "what": "post"}],
+    },
 }  # fmt: skip
 
 

@@ -51,7 +51,8 @@ def top_part(bare: Designed, support: int, top: TopBars) -> float:
     """
     if not bare.exterior(support):
         return 1.0
-    size, h, beside = top.web.size, _depth(bare, support), top.sides * top.overhang
+    # Bars that run on into a deeper span are developed as there, with more concrete below them.
+    size, h, beside = top.web.size, max(bare.outline.depths), top.sides * top.overhang
     area = 0.0
     for number, layer in enumerate(top.layers, start=1):
         web = Bar("top", "web", number, size, spaced(layer.number), h)
