@@ -214,16 +214,6 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
         {"use": "roof"},
         "use: 'roof' carries snow, which this beam does not take; write a use inside the building",
     ),
-    "hopeless": (
-        # w_f = 1.25 x (5.6544 + 3.4 x 3.1 + 40 x 3.1) + 1.5 x 14.88 = 175.243 + 22.32 = 197.563;
-        # x 7.22 = 1426.4 kN.m;
-        # 16.6816 x 380 x 566.1**2/2 = 1015.7 kN.m
-        {**RECTANGULAR, "superimposed": "40 kPa", "bottom_bars": "4-25M"},
-        (
-            "h: the concrete balances at most 1015.7 kN.m, but the factored moment is 1426.4 kN.m, "
-            "which no bars hold; write a deeper or wider beam, stronger concrete or less load"
-        ),
-    ),
 }
 
 

@@ -197,6 +197,42 @@ def test_block_in_the_web_of_a_beam() -> None:
     assert list(faults(record.data)) == []
 
 
+def test_more_moment_than_any_bars_balance() -> None:
+    """Given bars are shown as failing; the steel is that of a block down to the bars."""
+    inputs: dict[str, Any] = {"superimposed": "40 kPa", "bottom_bars": "4-25M", "ends": "free"}
+    record = record_of(**{**RECTANGULAR, **inputs})
+    assert_by_hand(
+        record,
+        {
+            "loads/w_f": "1.25*(5.6544 + 3.4*3.1 + 40*3.1) + 1.5*14.88 = 197.563",
+            "required-steel/M_rc": "16.6816*380*566.1**2/2/1e6 = 1015.7",
+            "required-steel/a_r": "620 - 30 - 11.3 - 12.6 = 566.1",
+            "required-steel/A_sr": "16.6816*380*566.1/340 = 10554.4",
+        },
+    )
+    assert not holds(record, "required-steel/concrete-balances")
+    assert {"required-steel/steel-for-moment", "flexure/strength"} <= set(record.failed)
+    assert list(faults(record.data)) == []
+
+
+def test_more_moment_than_any_bars_balance_with_a_flange() -> None:
+    """As above, with 500 x 60 mm of flange beside a web of 400 mm, to the last line.
+
+    The web gives 16.6816 x 400 = 6672.64 N a mm of depth.
+    """
+    record = record_of(**{**THIN, "superimposed": "90 kPa", "span": "10 m"})
+    assert_by_hand(
+        record,
+        {
+            "required-steel/C_f": "16.6816*500*60/1e3 = 500.448",
+            "required-steel/M_rc": "500.448*0.48801 + 6672.64*0.51801*0.259005 = 1139.47",
+            "required-steel/A_sr": "(500448 + 6672.64*518.01)/340 = 11638",
+        },
+    )
+    assert not holds(record, "required-steel/concrete-balances")
+    assert "flexure/strength" in record.failed
+
+
 def sheet_with(**values: str) -> Sheet:
     """Return a sheet with the parts that the resistance rests on, filled as given."""
     sheet = Sheet("X", notation=NOTATION)

@@ -29,6 +29,7 @@ EXAMPLES: dict[str, tuple[Given, Given]] = {
         {"c": 312, "d_2": 490, "c_d": 0.6364},
     ),
     "flexure.NEEDS_FLANGE_ONLY": ({"M_f": 345, "M_rf": 3590}, {"M_f": 900, "M_rf": 898}),
+    "flexure.BALANCES": ({"M_f": 696, "M_rc": 696.3}, {"M_f": 711, "M_rc": 696.3}),
     "flexure.ENOUGH_STEEL": ({"A_sr": 1810, "A_s": 2000}, {"A_sr": 2010, "A_s": 2000}),
     # A_s 4000: 1360 kN; flange 18.143125*900*100 = 1632.9 kN and the bars more: holds.
     # A_s 7000: 2380 kN; bars at most 1000*(340 - 18) = 322 kN: 1632.9 + 322 < 2380.

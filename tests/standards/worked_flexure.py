@@ -78,6 +78,21 @@ FLEXURE = (
         {**BASE, "b": 900, "h_f": 100, "d": 600},
         "18.143125*900*100*(600 - 50)/1e6 = 1632.88125*0.55 = 898.08",
     ),
+    # section of check no. 5a, block down to the bars: a = 535, 535 - 535/2 = 267.5 mm arm
+    W(
+        "flexure.LARGEST_MOMENT",
+        {**BASE, "d": 535, "b": 350},
+        "18.143125*350*535*267.5/1e6 = 908.8",
+        CHECK_5 + "a",
+    ),
+    # section of check no. 5b, block down to the bars, 600 mm: web 300 wide, arm 300 mm
+    W(
+        "flexure.LARGEST_MOMENT_TEE",
+        {**BASE, "C_f": 1088.5875, "d": 600, "h_f": 100, "b_w": 300},
+        "1088.5875*0.55 + 18.143125*300*600*300/1e6 = 1578.5",
+        CHECK_5 + "b",
+    ),
+    W("flexure.BLOCK_LARGEST", {"d": 535}, "535 = 535", CHECK_5 + "a"),
     # back from the resistance of check no. 5a to its block and its 2000 mm2
     W(
         "flexure.BLOCK_REQUIRED",

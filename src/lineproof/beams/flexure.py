@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from dataclasses import replace
 from typing import Any
 
 from lineproof.beams.bottom_bars import BARS, COMPRESSION_BARS
@@ -10,7 +11,7 @@ from lineproof.beams.inputs import Shape
 from lineproof.beams.section import compression_zone, zone_of
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
-from lineproof.formula import FROM_MEMORY
+from lineproof.formula import FROM_MEMORY, Formula
 from lineproof.quantity import echo
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
@@ -78,9 +79,12 @@ def record_required(sheet: Sheet, shape: Shape) -> None:
 def required(steps: Steps, shape: Shape) -> None:
     """Record inside the open part the steel required for M_f.
 
-    Raises :class:`UserError` where no reinforcement can do: the block would leave the section.
+    Where the concrete balances no such moment this is the steel of the largest that it does: more
+    bars have no larger force. The strength fails there, since M_r is never above that moment.
     """
-    _refuse_overload(steps, shape)
+    if _overloaded(steps, shape):
+        _record_largest(steps, shape)
+        return
     if shape != "rectangular":
         steps.line(clause.M_R_FLANGE_FULL)
         if not steps.decide(clause.NEEDS_FLANGE_ONLY):
@@ -94,21 +98,31 @@ def required(steps: Steps, shape: Shape) -> None:
     steps.lines(clause.BLOCK_REQUIRED, clause.A_S_REQUIRED)
 
 
-def _refuse_overload(steps: Steps, shape: Shape) -> None:
-    """Refuse a moment that even a block down to the bars does not balance."""
-    find = steps.sheet.find
-    b, b_w, d, M_f = (steps.place[n].value for n in ("b", "b_w", "d", "M_f"))
-    stress = find("alpha_1").value * find("phi_c").value * find("f_c").value
-    most = stress * b_w * d * d / 2
-    if shape != "rectangular":
-        h_f = steps.place["h_f"].value
-        most += stress * (b - b_w) * h_f * (d - h_f / 2)
-    if M_f >= most:
-        raise UserError(
-            f"h: the concrete balances at most {most / 1e6:.1f} kN.m, but the factored moment is "
-            f"{M_f / 1e6:.1f} kN.m, which no bars hold; write a deeper or wider beam, stronger "
-            "concrete or less load"
-        )
+def _largest_moment(shape: Shape) -> tuple[Formula, ...]:
+    """Return what gives the moment with the block down to the bars."""
+    if shape == "rectangular":
+        return (clause.LARGEST_MOMENT,)
+    return (clause.FLANGE_FORCE, clause.LARGEST_MOMENT_TEE)
+
+
+def _overloaded(steps: Steps, shape: Shape) -> bool:
+    """Tell whether even a block down to the bars does not balance the moment."""
+    formulas = _largest_moment(shape)
+    made = {formula.symbol for formula in formulas}
+    names = {name for formula in formulas for name in formula.names} - made
+    at = {name: steps.entry(name).value for name in {*names, "M_f"}}
+    for formula in formulas:
+        at[formula.symbol] = formula.at(at)
+    return not clause.BALANCES.holds(*clause.BALANCES.sides(at))
+
+
+def _record_largest(steps: Steps, shape: Shape) -> None:
+    """Record that no bars balance the moment, and the steel of the largest that is balanced."""
+    steps.lines(*_largest_moment(shape))
+    steps.decide(clause.BALANCES)
+    steps.line(clause.BLOCK_LARGEST)
+    steel = clause.A_S_REQUIRED if shape == "rectangular" else clause.A_S_REQUIRED_WEB
+    steps.line(replace(steel, title="Reinforcement that the concrete balances: more adds nothing"))
 
 
 def record_flexure(sheet: Sheet, shape: Shape, pair: CodePair) -> None:

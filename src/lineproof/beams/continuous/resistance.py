@@ -255,7 +255,10 @@ def moment_of(designed: Designed, A: Floats, d: Floats, b: Floats) -> Floats:
 
 
 def area_for(designed: Designed, M: float, d: float, b: float) -> float:
-    """Return the area of bars that a moment requires; infinite where the concrete is too small."""
+    """Return the area of bars that a moment requires.
+
+    Where the concrete balances no such moment, that of the largest which it does.
+    """
     s, outline = designed.strengths, designed.outline
     if M <= 0:
         return 0.0
@@ -264,9 +267,7 @@ def area_for(designed: Designed, M: float, d: float, b: float) -> float:
     if b > b_w and stress * b * h_f * (d - h_f / 2) < M:
         flange = stress * (b - b_w) * h_f
         M, b = M - flange * (d - h_f / 2), b_w
-    under = d * d - 2 * M / (stress * b)
-    if under < 0:
-        return float("inf")
+    under = max(d * d - 2 * M / (stress * b), 0.0)
     return float((flange + stress * b * (d - under**0.5)) / yield_force(designed))
 
 

@@ -120,6 +120,34 @@ NEEDS_FLANGE_ONLY = _criterion(
     no="The block needed for the moment reaches into the web.",
     key="flange-is-enough",
 )
+LARGEST_MOMENT = _formula(
+    "M_rc = alpha_1*phi_c*f_c*b*d**2/2",
+    clause="10.1",
+    title="Largest moment that the concrete balances, with the block down to the bars",
+    basis=MECHANICS,
+)
+LARGEST_MOMENT_TEE = _formula(
+    "M_rc = C_f*(d - h_f/2) + alpha_1*phi_c*f_c*b_w*d**2/2",
+    clause="10.1",
+    title="Largest moment that the concrete balances, with the block down to the bars",
+    basis=MECHANICS,
+)
+BALANCES = _criterion(
+    "M_f <= M_rc",
+    clause="10.1",
+    title="Whether the concrete balances the moment",
+    basis=MECHANICS,
+    yes="The concrete balances the moment.",
+    no="The concrete does NOT balance the moment, whatever the bars: a deeper or wider section, "
+    "stronger concrete or less load.",
+    key="concrete-balances",
+)
+BLOCK_LARGEST = _formula(
+    "a_r = d",
+    clause="10.1",
+    title="Depth of the block, down to the bars",
+    basis=MECHANICS,
+)
 BLOCK_REQUIRED = _formula(
     "a_r = d - sqrt(d**2 - 2*M_f/(alpha_1*phi_c*f_c*b))",
     clause="10.1",
@@ -172,10 +200,21 @@ FORMULAS = (
     M_R_TEE,
     YIELD_LIMIT,
     M_R_FLANGE_FULL,
+    LARGEST_MOMENT,
+    LARGEST_MOMENT_TEE,
+    BLOCK_LARGEST,
     BLOCK_REQUIRED,
     A_S_REQUIRED,
     WEB_MOMENT,
     BLOCK_REQUIRED_WEB,
     A_S_REQUIRED_WEB,
 )
-CRITERIA = (IN_FLANGE, STRENGTH, YIELDS, UPPER_LAYER_YIELDS, NEEDS_FLANGE_ONLY, ENOUGH_STEEL)
+CRITERIA = (
+    IN_FLANGE,
+    STRENGTH,
+    YIELDS,
+    UPPER_LAYER_YIELDS,
+    BALANCES,
+    NEEDS_FLANGE_ONLY,
+    ENOUGH_STEEL,
+)

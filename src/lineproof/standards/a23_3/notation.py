@@ -42,6 +42,7 @@ _ROWS = (
     ("M_r", "M", "r", "", "factored moment resistance", "kN.m"),
     ("M_rf", "M", "rf", "", "moment resistance with the block just filling the flange", "kN.m"),
     ("M_rw", "M", "rw", "", "moment carried by the web alone", "kN.m"),
+    ("M_rc", "M", "rc", "", "largest moment that the concrete balances", "kN.m"),
     ("A_s", "A", "s", "", "area of tension reinforcement", "mm2"),
     ("A_s1", "A", "s1", "", "area of bars in the first layer or group", "mm2"),
     ("A_s2", "A", "s2", "", "area of bars in the second layer or group", "mm2"),
