@@ -130,8 +130,13 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
         (
             "grade: '600R' is not a grade of reinforcement; did you mean '500R'? There are "
             "400R, 400W, "
-            "500R, 500W"
+            "500R, 500W; of older bars write the yield strength, such as '300 MPa'"
         ),
+    ),
+    "older bars": (
+        {"grade": "150 MPa"},
+        "grade: '150 MPa' is outside 200 to 500 MPa (A23.3, 8.5.1; older bars); write a value "
+        "inside it",
     ),
     "rating between the rows": (
         {"fire_rating": "2.5 h"},

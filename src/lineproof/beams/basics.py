@@ -7,12 +7,13 @@ from typing import Protocol
 from lineproof.beams.bottom_bars import BARS
 from lineproof.beams.flexure import YIELD_CLAUSE, confirmed_value
 from lineproof.beams.inputs import FloorBeamInputs
+from lineproof.beams.steel import record_yield_strength
 from lineproof.beams.steps import Steps
 from lineproof.formula import Criterion
 from lineproof.quantity import Typed
 from lineproof.record.build import EARLIER_EDITION
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3 import bars, cover, materials, stress_block
+from lineproof.standards.a23_3 import cover, materials, stress_block
 from lineproof.standards.codes import CodePair
 from lineproof.standards.nbc import loads
 
@@ -71,7 +72,7 @@ def record_materials(
     with sheet.part(MATERIALS, "Materials"):
         sheet.lookup("phi_c", materials.RESISTANCE_FACTORS, "cast in place")
         sheet.lookup("phi_s", materials.RESISTANCE_FACTORS, "cast in place")
-        sheet.lookup("f_y", bars.GRADES, grade)
+        record_yield_strength(sheet, grade)
         sheet.lookup("E_s", materials.CONSTANTS, "reinforcement")
         sheet.lookup("eps_cu", materials.CONSTANTS, "concrete")
         sheet.lookup("lambda_", materials.DENSITY_FACTORS, density)

@@ -47,6 +47,8 @@ class Range:
     zero: bool = False
 
 
+OLDER_BARS = Range("MPa", 200, 500, 300)
+"""Yield strength of bars that are not of a grade of today."""
 RANGES: Mapping[str, Range] = {
     "span": Range("m", 1, 40, 8),
     "spacing": Range("m", 0.3, 20, 3.1),
@@ -140,6 +142,26 @@ def row_of(name: str, given: object, table: LookupTable) -> str:
     """Return ``given`` if it is a row of the table."""
     table.row(given, name)
     return str(given)
+
+
+def read_grade(name: str, given: QuantityInput) -> str:
+    """Return a grade of reinforcement, or the yield strength of older bars as text with a unit.
+
+    Raises :class:`UserError` for anything else and for a strength outside 200 to 500 MPa.
+    """
+    try:
+        read_quantity(name, given, OLDER_BARS.unit, f"{OLDER_BARS.usual:g}")
+    except UserError:
+        return _grade_of(name, given)
+    return read_in_range(name, given, OLDER_BARS, " (A23.3, 8.5.1; older bars)").text
+
+
+def _grade_of(name: str, given: object) -> str:
+    try:
+        return row_of(name, given, GRADES)
+    except UserError as error:
+        hint = f"; of older bars write the yield strength, such as {_sample(OLDER_BARS)}"
+        raise UserError([f"{fault}{hint}" for fault in error.faults]) from None
 
 
 @dataclass(frozen=True)
@@ -236,7 +258,7 @@ def read_floor_beam(
             for name in ("h_f", "live_load", "tributary_width", "floor_weight")
         },
         "density": take("density", row_of, DENSITY_FACTORS),
-        "grade": take("grade", row_of, GRADES),
+        "grade": take("grade", read_grade),
         "use": take("use", _use_inside),
         "exposure": take("exposure", row_of, EXPOSURES),
         "fire_rating": take("fire_rating", read_fire_rating),

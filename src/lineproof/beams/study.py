@@ -23,6 +23,7 @@ from lineproof.beams.inputs import (
     Shape,
     check_density,
     one_of,
+    read_grade,
     read_input,
     row_of,
 )
@@ -32,7 +33,7 @@ from lineproof.beams.section import SECTION, record_gross
 from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.sheet import Sheet
-from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
+from lineproof.standards.a23_3.bars import STIRRUP_BENDS
 from lineproof.standards.a23_3.materials import DENSITY_FACTORS
 from lineproof.standards.codes import CodePair
 
@@ -140,11 +141,11 @@ def section_study(
         read[name] = reader.take_if_given(name, read_input)
     layers = reader.take("bars", read_bars)
     for name, table in (
-        ("grade", GRADES),
         ("stirrup", STIRRUP_BENDS),
         ("density", DENSITY_FACTORS),
     ):
         reader.take(name, row_of, table)
+    grade = reader.take("grade", read_grade)
     check_density({**read, "density": density}, given, reader.faults)
     reader.smaller("b_w", "b_f", read)
     reader.smaller("h_f", "h", read)

@@ -21,6 +21,7 @@ from lineproof.beams.continuous.schedule_tables import (
     quantity_table,
     stirrup_table,
 )
+from lineproof.beams.steel import bends_as
 from lineproof.drawing import Figure, to_json
 from lineproof.errors import UserError
 from lineproof.formula import FROM_MEMORY
@@ -34,7 +35,7 @@ FIRST_SCHEDULE = 60
 
 def schedule_of(design: Design) -> Schedule:
     """Return the schedule of a design; raises :class:`UserError` for bars that contradict."""
-    grade = design.model.inputs.grade
+    grade = bends_as(design.model.inputs.grade)
     faults = contradictions(design.outline, design.detailing, grade)
     if faults:
         raise UserError(list(faults))
@@ -59,7 +60,7 @@ def record_schedule(design: Design) -> None:
         sheet.note("bends-note", BEND_NOTE, title="Bends", clause="A23.1 6.6.2", basis=FROM_MEMORY)
         sheet.note("stirrups-note", STIRRUP_NOTE, title="Stirrups")
         sheet.note("quantities-note", QUANTITY_NOTE, title="Quantities")
-        long = over_stock(made.detailing, design.model.inputs.grade)
+        long = over_stock(made.detailing, bends_as(design.model.inputs.grade))
         if long:
             sheet.note("stock", " ".join(long), title="Stock length")
 
@@ -113,7 +114,7 @@ def record_drawings(design: Design, front: int) -> None:
         design.outline, made.detailing, aggregate=aggregate, stirrup=design.model.inputs.stirrup
     )
     marks = tuple((letter, x) for letter, x, _ in sections)
-    grade = design.model.inputs.grade
+    grade = bends_as(design.model.inputs.grade)
     drawn = elevation_figures(
         design.outline, made.detailing, sections=marks, short=_short(design), grade=grade
     )

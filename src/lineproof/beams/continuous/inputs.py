@@ -44,6 +44,7 @@ from lineproof.beams.inputs import (
     no_openings,
     one_of,
     read_fire_rating,
+    read_grade,
     read_in_range,
     read_input,
     row_of,
@@ -51,7 +52,7 @@ from lineproof.beams.inputs import (
 )
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed, echo
-from lineproof.standards.a23_3.bars import GRADES, STIRRUP_BENDS
+from lineproof.standards.a23_3.bars import STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_SLAB
 from lineproof.standards.a23_3.deflection import DURATIONS, LIMITS
 from lineproof.standards.a23_3.materials import DENSITY_FACTORS
@@ -165,7 +166,7 @@ def _read_alone(reader: InputReader) -> dict[str, Any]:
         "gamma_w": some("gamma_w", read_in_range, UNIT_WEIGHT),
         "sustained": some("sustained", read_in_range, SHARE),
         "density": take("density", row_of, DENSITY_FACTORS),
-        "grade": take("grade", row_of, GRADES),
+        "grade": take("grade", read_grade),
         "use": take("use", row_of, USES),
         "reduce_live_load": take("reduce_live_load", yes_or_no),
         "exposure": take("exposure", row_of, EXPOSURES),

@@ -16,10 +16,10 @@ from lineproof.beams.inputs import (
     SNOWED_ON,
     check_flange,
 )
+from lineproof.beams.steel import yield_strength
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed
 from lineproof.quantity.units import internal_factor
-from lineproof.standards.a23_3.bars import GRADES
 
 DEEPEST = 2.0
 """Clear span over depth below which a beam is deep (10.7)."""
@@ -84,7 +84,7 @@ def check_method(fields: Mapping[str, Any], faults: FaultList) -> None:
     """Refuse the simplified method of shear where it does not hold."""
     if fields["shear_method"] != "simplified" or None in (fields["grade"], fields["f_c"]):
         return
-    f_y, f_c = GRADES.number(fields["grade"], "f_y"), fields["f_c"].value
+    f_y, f_c = yield_strength(fields["grade"]), fields["f_c"].value
     most_steel, most_concrete = SIMPLIFIED_UP_TO
     if f_y > most_steel:
         faults.add(
