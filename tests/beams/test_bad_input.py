@@ -135,8 +135,10 @@ EXACT: dict[str, tuple[dict[str, Any], str]] = {
     ),
     "older bars": (
         {"grade": "150 MPa"},
-        "grade: '150 MPa' is outside 200 to 500 MPa (A23.3, 8.5.1; older bars); write a value "
-        "inside it",
+        (
+            "grade: '150 MPa' is outside 200 to 500 MPa (A23.3, 8.5.1; older bars); write a value "
+            "inside it"
+        ),
     ),
     "rating between the rows": (
         {"fire_rating": "2.5 h"},
