@@ -9,6 +9,7 @@ from typing import Any, NoReturn
 from lineproof.errors import UserError
 from lineproof.record import Entry, Part
 from lineproof.record.entry import VALUES
+from lineproof.record.uncollected import uncollected
 
 _CALLS_NAMED = 3
 _LONGEST_ID = 60
@@ -116,7 +117,8 @@ class Parts:
         self._chapter, self._closing = made, closing
         self._stopped_calls[call] = None
         try:
-            yield
+            with uncollected():
+                yield
             del self._stopped_calls[call]
         finally:
             self._chapter = self._closing = None
