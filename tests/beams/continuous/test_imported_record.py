@@ -469,7 +469,7 @@ def test_a_moment_at_a_free_end_is_refused(tmp_path: Path) -> None:
     assert "M is -20 kN.m at support 1, which is given as a free end" in found[0]
 
 
-def simple_span(folder: Path, sign: int = 1) -> Mapping[str, Entry]:
+def simple_span(folder: Path, sign: float = 1) -> Mapping[str, Entry]:
     """Analyse 7 m by a file with M = 42*x - 6*x**2 [kN.m] and V = 42 - 12*x [kN], times a sign."""
     places = [x / 2 for x in range(15)]
     rows = [
@@ -508,6 +508,16 @@ def test_a_file_with_both_signs_turned_is_refused(tmp_path: Path) -> None:
     (fault,) = refused(lambda: simple_span(tmp_path, -1))
     assert "span 1: no case loads it downward, V falls by -84 kN at most (1.25D+1.5L, all)" in fault
     assert "write both with the other sign in this span" in fault
+
+
+def test_a_file_in_other_units_than_its_header_is_refused(tmp_path: Path) -> None:
+    """N.m and N under a header of kN.m and kN: 84 000 kN for 334.51, 251 times as much.
+
+    Statics hold in it, and bars would be sought in vain for such moments.
+    """
+    (fault,) = refused(lambda: simple_span(tmp_path, 1000))
+    assert "span 1: the load of 1.25D+1.5L, all is 84000 kN, 251 times the 334.5 kN" in fault
+    assert "name the units of the file in its header, such as 'M (N.m)'" in fault
 
 
 def test_a_case_left_out_of_a_combination_shows_in_the_table(tmp_path: Path) -> None:

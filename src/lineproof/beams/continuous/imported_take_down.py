@@ -4,11 +4,12 @@ from __future__ import annotations
 
 import math
 
-from lineproof.beams.analysis.arrangements import Combination, factored_combinations
+from lineproof.beams.analysis.arrangements import Combination, LoadCase, factored_combinations
 from lineproof.beams.continuous.imported_case import printed, typed
 from lineproof.beams.continuous.imported_forces import ImportedForces
 from lineproof.beams.continuous.model import Model, SingleLoad
 from lineproof.beams.continuous.symbols import notation, numbered, stated, stated_check
+from lineproof.errors import FaultList
 
 _COLUMNS = ["Span", "File, kN", "Case", "Load take-down, kN", "Combination", "Ratio"]
 _TAKE_DOWN = (
@@ -16,18 +17,21 @@ _TAKE_DOWN = (
     "this beam carries what its take-down asks for; a tenth is left for loads that the frame "
     "analysis takes more closely. A ratio far above 1 asks for a reason as well."
 )
+_MOST = 50.0
+"""Ratio of a file's load to that of the take-down from which on its units are taken for wrong."""
 _LEAST = 0.9
 """Part of the load take-down that a file must carry on every span at least, in its largest case."""
 
 
 def record_take_down(model: Model, forces: ImportedForces) -> None:
-    """Record the load on each span by the file, and that it is not below that of the take-down."""
+    """Record the load on each span by the file, and that it is not below that of the take-down.
+
+    Raises :class:`UserError` where it is so far above that the file must be of other units.
+    """
+    _refuse_other_units(model, forces)
     rows = []
-    V = forces.source.imported.envelope.V
-    for span, pieces in enumerate(forces.pieces, start=1):
-        loads = V[:, pieces[0].i] - V[:, pieces[-1].j]
-        row = int(loads.argmax())
-        load, case = float(loads[row]), forces.cases[row]
+    for span in range(1, model.spans + 1):
+        load, case = _largest_of_file(forces, span)
         most, combination = _largest(model, span)
         ours = _record_load(model, span, combination, most)
         model.sheet.given(f"W_f{span}", typed(load, "kN"), source=f"{forces.source.name}, {case}")
@@ -41,6 +45,28 @@ def record_take_down(model: Model, forces: ImportedForces) -> None:
         title="Largest load on each span, by the file and by the load take-down",
     )  # fmt: skip
     model.sheet.note("imported-loads-text", _TAKE_DOWN, title="Loads of the file")
+
+
+def _refuse_other_units(model: Model, forces: ImportedForces) -> None:
+    faults = FaultList()
+    for span in range(1, model.spans + 1):
+        (load, case), (most, combination) = _largest_of_file(forces, span), _largest(model, span)
+        if 0 < _MOST * most < load:
+            faults.add(
+                f"forces_csv: span {span}: the load of {case} is {printed(load, 'kN')} kN, "
+                f"{load / most:.0f} times the {printed(most, 'kN')} kN of the load take-down "
+                f"({combination.name}); name the units of the file in its header, such as "
+                "'M (N.m)' and 'V (N)', or write M in kN.m and V in kN"
+            )
+    faults.raise_if_any()
+
+
+def _largest_of_file(forces: ImportedForces, span: int) -> tuple[float, LoadCase]:
+    """Return the largest load of the file on a span [N], what V falls by along it, and its case."""
+    V, pieces = forces.source.imported.envelope.V, forces.pieces[span - 1]
+    loads = V[:, pieces[0].i] - V[:, pieces[-1].j]
+    row = int(loads.argmax())
+    return float(loads[row]), forces.cases[row]
 
 
 def _largest(model: Model, span: int) -> tuple[float, Combination]:
