@@ -111,6 +111,9 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
         {"delta_k": 33, "M_m": 40, "M_h1": 40, "M_h2": 20, "I_cr1": 2e9, "I_cr2": 4e9, **STIFF},
     ),
     "development.TOP_BAR": ({"h_u": 301}, {"h_u": 300}),
+    # 3 x 19.5 = 58.5 mm, 6 x 19.5 = 117 mm
+    "development.COATED_COVERED": ({"d_b": 19.5, "c_b1": 58.5}, {"d_b": 19.5, "c_b1": 58.4}),
+    "development.COATED_SPACED": ({"d_b": 19.5, "s_c": 117}, {"d_b": 19.5, "s_c": 116.9}),
     "development.COVERED": ({"d_b": 25.2, "c_b1": 51.3}, {"d_b": 25.2, "c_b1": 20}),
     # 1.4*25.2 = 35.28; 2*16 = 32
     "development.SPACED": ({"d_b": 25.2, "s_c": 48.9}, {"d_b": 25.2, "s_c": 35}),

@@ -260,6 +260,8 @@ CRACKS = (
         "240*(63.9*11182.5)**(1/3) = 240*714561.75**(1/3) = 21456",
         CHECK_7,
     ),
+    # f_s 1.2 times as large a z: 1.2 z <= 25 000 is z <= 20 833
+    W("crack_control.COATED_LIMIT", {"z_mu": 25000}, "25000/1.2 = 20833"),
     W(
         "crack_control.SKIN_HEIGHT",
         {"h": 900, "d": 815},

@@ -53,16 +53,19 @@ def cracks_inside(
     layers: BarLayers,
     area: Formula = clause.TENSION_AREA,
     stress: Stress | None = None,
+    *,
+    coated: bool = False,
 ) -> None:
     """Record z inside the open part, with the concrete in tension by ``area``.
 
-    Where the allowance for the stress of the bars does not do, ``stress`` calculates it.
+    Where the allowance for the stress of the bars does not do, ``stress`` calculates it. Bars that
+    are ``coated`` with epoxy have a smaller limit.
     """
     largest = max(layers, key=lambda layer: layer.diameter)
     if largest is not layers[0]:
         steps.bind(A_b=_area_of(steps.sheet, largest.size))
     steps.lines(clause.D_C, clause.D_S, clause.BAR_COUNT, area)
-    steps.bind(z_max=steps.sheet.lookup("z_max", clause.LIMITS, exposure_kind(exposure)))
+    _record_limit(steps, exposure_kind(exposure), coated=coated)
     if stress is None or steps.holds(clause.ALLOWANCE_DOES):
         steps.line(clause.STRESS_ALLOWANCE)
     else:
@@ -70,6 +73,14 @@ def cracks_inside(
         stress(steps)
     steps.line(clause.Z)
     steps.check(clause.CRACKS)
+
+
+def _record_limit(steps: Steps, row: str, *, coated: bool) -> None:
+    if not coated:
+        steps.bind(z_max=steps.sheet.lookup("z_max", clause.LIMITS, row))
+        return
+    steps.bind(z_mu=steps.sheet.lookup("z_mu", clause.LIMITS, row, "z_max"))
+    steps.line(clause.COATED_LIMIT)
 
 
 def stress_inside(steps: Steps, A_s: Entry) -> None:

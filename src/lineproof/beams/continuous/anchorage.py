@@ -12,7 +12,7 @@ from typing import Any, Literal
 from lineproof.beams.bars import spaced
 from lineproof.beams.continuous import numbers
 from lineproof.beams.continuous.bending import hook_leg
-from lineproof.beams.continuous.detailing_data import Basis, Designed
+from lineproof.beams.continuous.detailing_data import Basis, Designed, Strengths
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.beams.inputs import OVERHANGS
 from lineproof.formula import Criterion, Formula
@@ -93,7 +93,7 @@ def develop(basis: Basis, bar: Bar) -> Development:
     top = holds(development.TOP_BAR, h_u=_below(basis, bar, d_bs, d_b))
     common = {
         "k_1": development.LOCATION.number(TOP_ROW if top else OTHER_ROW, "k_1"),
-        "k_2": development.COATING.number("none", "k_2"),
+        "k_2": development.COATING.number(_coating(s, d_b, c_b1, s_c), "k_2"),
         "k_3": development.DENSITY.number(s.density, "k_3"),
         "k_4": development.SIZE.number(bar.size, "k_4"),
         "f_y": s.f_y, "f_c": s.f_c, "d_b": d_b, "A_b": A_b,
@@ -108,6 +108,15 @@ def develop(basis: Basis, bar: Bar) -> Development:
         bar, s_c, top, short, table, general, l_d0,
         value(development.L_D, l_d0=l_d0), value(laps.CLASS_B, l_d0=l_d0),
     )  # fmt: skip
+
+
+def _coating(s: Strengths, d_b: float, c_b1: float, s_c: float) -> str:
+    """Return the row of the coating factor."""
+    if s.coating == development.UNCOATED:
+        return development.UNCOATED
+    covered = holds(development.COATED_COVERED, d_b=d_b, c_b1=c_b1)
+    apart = holds(development.COATED_SPACED, d_b=d_b, s_c=s_c)
+    return development.COATED if covered and apart else development.COATED_CLOSE
 
 
 def _below(basis: Basis, bar: Bar, d_bs: float, d_b: float) -> float:
@@ -244,7 +253,7 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
         k_hc=hooks.COVER_FACTORS.number(COVERED_ROW if reduced else UNCOVERED_ROW, "k_hc"),
         k_ht=hooks.TIE_FACTORS.number(ties, "k_ht"),
         k_hd=hooks.DENSITY_FACTORS.number(s.density, "k_hd"),
-        k_he=hooks.COATING_FACTORS.number("none", "k_he"), l_hb=l_hb, d_b=d_b,
+        k_he=hooks.COATING_FACTORS.number(s.coating, "k_he"), l_hb=l_hb, d_b=d_b,
     )  # fmt: skip
     s_tie = _tie_spacing_apart(designed, d_b)
     return HookLength(size, c_side, c_tail, c_top, tied, s_tie, l_hb, l_dh)

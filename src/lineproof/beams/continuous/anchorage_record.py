@@ -183,9 +183,14 @@ def _record_factors(steps: Steps, designed: Designed, bar: Bar) -> None:
         deep = steps.entry("h_f") if bar.place == "overhang" else steps.entry("h")
         steps.line(development.FRESH_BELOW, h=deep)
         row = TOP_ROW if steps.decide(development.TOP_BAR) else OTHER_ROW
+    coating = development.UNCOATED
+    if designed.strengths.coating != development.UNCOATED:
+        covered = steps.decide(development.COATED_COVERED)
+        apart = steps.decide(development.COATED_SPACED)
+        coating = development.COATED if covered and apart else development.COATED_CLOSE
     steps.bind(
         k_1=sheet.lookup("k_1", development.LOCATION, row),
-        k_2=sheet.lookup("k_2", development.COATING, "none"),
+        k_2=sheet.lookup("k_2", development.COATING, coating),
         k_3=sheet.lookup("k_3", development.DENSITY, designed.strengths.density),
         k_4=sheet.lookup("k_4", development.SIZE, bar.size),
     )
@@ -301,5 +306,5 @@ def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, tie
         k_hc=sheet.lookup("k_hc", hooks.COVER_FACTORS, covered),
         k_ht=sheet.lookup("k_ht", hooks.TIE_FACTORS, ties),
         k_hd=sheet.lookup("k_hd", hooks.DENSITY_FACTORS, designed.strengths.density),
-        k_he=sheet.lookup("k_he", hooks.COATING_FACTORS, "none"),
+        k_he=sheet.lookup("k_he", hooks.COATING_FACTORS, designed.strengths.coating),
     )

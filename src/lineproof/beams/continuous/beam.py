@@ -244,6 +244,7 @@ def continuous_beam(
     density: str = "normal",
     gamma_c: QuantityInput = "2400 kg/m3",
     gamma_w: QuantityInput | None = None,
+    coating: str = "none",
     aggregate: QuantityInput = "20 mm",
     fire_aggregate: str = "S",
     stirrup: str = "10M",

@@ -301,7 +301,7 @@ def _basis(model: Model, outline: BeamOutline) -> Basis:
     numbers = {n: find(n).value for n in ("f_c", "f_y", "phi_c", "phi_s", "alpha_1", "a_max")}
     return Basis(
         outline,
-        Strengths(**numbers, density=inputs.density),
+        Strengths(**numbers, density=inputs.density, coating=inputs.coating),
         Stirrups(inputs.stirrup, inputs.stirrup_legs, FIRST_SPACING),
     )
 

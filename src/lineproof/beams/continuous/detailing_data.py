@@ -40,6 +40,7 @@ class Strengths:
     alpha_1: float
     a_max: float
     density: str = "normal"
+    coating: str = "none"
 
 
 @dataclass(frozen=True, slots=True)

@@ -117,7 +117,7 @@ def record_sag(design: Design, span: int) -> None:
             )
             stress = sag_stress(model, span, steps.entry("A_s"))
             count_standing(steps, key)
-            cracks_inside(steps, inputs.exposure, layers, stress=stress)
+            cracks_inside(steps, inputs.exposure, layers, stress=stress, coated=inputs.coated)
         if steps.decide(NEEDS_SKIN):
             side = design.side_bars(span, sag_at(design.designed, span))
             record_skin(steps, inputs.exposure, side)
@@ -308,7 +308,10 @@ def _record_face(
     counted = steps.entry("A_s")
     count_standing(steps, face.key)
     stress = face_stress(model, face, counted)
-    cracks_inside(steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape], stress)
+    cracks_inside(
+        steps, inputs.exposure, top.groups, TENSION_AREAS[inputs.shape], stress,
+        coated=inputs.coated,
+    )  # fmt: skip
     if steps.holds(NEEDS_SKIN):
         x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
         record_skin(steps, inputs.exposure, design.side_bars(face.span, x))
@@ -374,5 +377,6 @@ def _record_other_face(model: Model, face: Face, worst: Mapping[str, Entry], top
         _check_spread(steps, top)
     stress = face_stress(model, face, worst[COUNTED])
     cracks_inside(
-        steps, model.inputs.exposure, top.groups, TENSION_AREAS[model.inputs.shape], stress
-    )
+        steps, model.inputs.exposure, top.groups, TENSION_AREAS[model.inputs.shape], stress,
+        coated=model.inputs.coated,
+    )  # fmt: skip

@@ -53,6 +53,8 @@ def materials_of(model: Model, pair: CodePair) -> Numbers:
     value = confirmed_value(sheet.project, pair)
     at["c_d"] = flexure.YIELD_LIMIT.function(at["f_y"]) if value is None else float(value["value"])
     at["z_max"] = crack_control.LIMITS.number(exposure_kind(model.inputs.exposure), "z_max")
+    if model.inputs.coated:
+        at["z_max"] = crack_control.COATED_LIMIT.at({"z_mu": at["z_max"]})
     return at
 
 

@@ -55,6 +55,8 @@ from lineproof.quantity import Typed, echo
 from lineproof.standards.a23_3.bars import STIRRUP_BENDS
 from lineproof.standards.a23_3.cover import EXPOSURES, FIRE_SLAB
 from lineproof.standards.a23_3.deflection import DURATIONS, LIMITS
+from lineproof.standards.a23_3.development import UNCOATED
+from lineproof.standards.a23_3.hooks import COATING_FACTORS
 from lineproof.standards.a23_3.materials import DENSITY_FACTORS
 from lineproof.standards.codes import CodePair
 from lineproof.standards.nbc.loads import USES
@@ -82,6 +84,7 @@ class ContinuousInputs:
     gamma_w: Typed | None
     density: str
     grade: str
+    coating: str
     superimposed: Typed
     partitions: Typed | None
     floor_weight: Typed | None
@@ -118,6 +121,11 @@ class ContinuousInputs:
     def slab(self) -> bool:
         """Whether the beam has a flange."""
         return self.h_f is not None
+
+    @property
+    def coated(self) -> bool:
+        """Whether the bars are coated with epoxy."""
+        return self.coating != UNCOATED
 
     @property
     def held(self) -> tuple[int, ...]:
@@ -167,6 +175,7 @@ def _read_alone(reader: InputReader) -> dict[str, Any]:
         "sustained": some("sustained", read_in_range, SHARE),
         "density": take("density", row_of, DENSITY_FACTORS),
         "grade": take("grade", read_grade),
+        "coating": take("coating", row_of, COATING_FACTORS),
         "use": take("use", row_of, USES),
         "reduce_live_load": take("reduce_live_load", yes_or_no),
         "exposure": take("exposure", row_of, EXPOSURES),

@@ -123,8 +123,9 @@ def _supports_text(inputs: ContinuousInputs) -> str:
 
 
 def _choices_text(inputs: ContinuousInputs) -> str:
+    coated = ", coated with epoxy" if inputs.coated else ""
     return (
-        f"Section {inputs.shape}; reinforcement {inputs.grade}; {inputs.density}-density "
+        f"Section {inputs.shape}; reinforcement {inputs.grade}{coated}; {inputs.density}-density "
         f"concrete; use: {inputs.use}; exposure class {inputs.exposure}; fire-resistance rating "
         f"{inputs.fire_rating}, type {inputs.fire_aggregate} concrete; stirrups {inputs.stirrup}; "
         f"shear by the {inputs.shear_method} method; minimum reinforcement by "

@@ -83,6 +83,12 @@ TENSION_AREA_L = _formula(
     title="Concrete in tension around each top bar, web and overhang",
     basis=MECHANICS,
 )
+COATED_LIMIT = _formula(
+    "z_max = z_mu/1.2",
+    clause="10.6.1",
+    title="Largest allowed z of coated bars, whose z counts 1.2 times",
+    basis=FROM_MEMORY,
+)
 Z = _formula(
     "z = f_s*(d_c*A_e)**(1/3)",
     clause="10.6.1",
@@ -176,6 +182,7 @@ FORMULAS = (
     TENSION_AREA,
     TENSION_AREA_T,
     TENSION_AREA_L,
+    COATED_LIMIT,
     Z,
     SKIN_HEIGHT,
     SKIN_WIDTH,

@@ -37,6 +37,26 @@ COATING = LookupTable(
     clause="12.2.4",
     basis=FROM_MEMORY,
 )
+COATED_CLOSE, COATED, UNCOATED = COATING.rows
+COATED_COVERED = _criterion(
+    "3*d_b <= c_b1",
+    clause="12.2.4",
+    title="Coated bars: cover of at least three bar diameters",
+    basis=FROM_MEMORY,
+    yes="The cover is at least three bar diameters.",
+    no="The cover is below three bar diameters: the larger factor.",
+    key="coated-cover",
+)
+COATED_SPACED = _criterion(
+    "6*d_b <= s_c",
+    unit="mm",
+    clause="12.2.4",
+    title="Coated bars: clear distance of at least six bar diameters",
+    basis=FROM_MEMORY,
+    yes="The bars are at least six diameters apart.",
+    no="The bars are less than six diameters apart: the larger factor.",
+    key="coated-spacing",
+)
 DENSITY = LookupTable(
     "Development: concrete density factor",
     "density of concrete",
@@ -261,6 +281,7 @@ FORMULAS = (
     COMPRESSION_TIED,
 )  # fmt: skip
 CRITERIA = (
-    TOP_BAR, COVERED, SPACED, SPACED_SLAB, DEVELOPED, IN_PART, DEVELOPED_COMPRESSION,
+    TOP_BAR, COATED_COVERED, COATED_SPACED, COVERED, SPACED, SPACED_SLAB, DEVELOPED, IN_PART,
+    DEVELOPED_COMPRESSION,
 )  # fmt: skip
 TABLES = (LOCATION, COATING, DENSITY, SIZE, BUNDLES)

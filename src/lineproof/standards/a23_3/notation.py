@@ -105,6 +105,7 @@ _ROWS = (
     ("A_e", "A", "", "", "area of concrete in tension around each bar", "mm2"),
     ("z", "z", "", "", "quantity that limits the distribution of bars", "N/mm"),
     ("z_max", "z", "max", "", "largest allowed z", "N/mm"),
+    ("z_mu", "z", "max,0", "", "largest allowed z of bars without coating", "N/mm"),
     ("A_cs", "A", "cs", "", "area of the strips of exposed skin", "mm2"),
     ("A_sk", "A", "sk", "", "area of skin reinforcement, both faces", "mm2"),
     ("rho_sk", "ρ", "sk", "", "ratio of skin reinforcement to A_cs", ""),
