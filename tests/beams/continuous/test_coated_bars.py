@@ -20,7 +20,8 @@ from .flow import record_of, start
 PARKADE: dict[str, Any] = {
     "spans": ["7.5 m", "7.5 m"], "supports": ["column 350 mm"] * 3, "h": "600 mm", "b_w": "400 mm",
     "h_f": "150 mm", "spacing": "3 m", "f_c": "35 MPa", "exposure": "C-1", "cover": "60 mm",
-    "use": "garage, vehicles to 4000 kg", "superimposed": "0.5 kPa", "slab_bars": "2 x 10M at 250 mm",
+    "use": "garage, vehicles to 4000 kg", "superimposed": "0.5 kPa",
+    "slab_bars": "2 x 10M at 250 mm",
 }  # fmt: skip
 
 
