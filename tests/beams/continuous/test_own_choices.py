@@ -89,6 +89,14 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "f_c": "40 MPa", "grade": "500W", "superimposed": "1.8 kPa", "use": "residential area",
         "cover": "40 mm", "density": "semi-low", "gamma_c": "2000 kg/m3", "gamma_w": "21 kN/m3",
     },
+    "coated bars whose laps are longer than 100 diameters": {  # were taken for two sets of bars
+        "spans": ["2.6 m", "6.8 m", "8.9 m", "1.8 m"], "h": "640 mm", "b_w": "480 mm",
+        "supports": ["free", "column 400 mm", "column 250 mm", "wall 300 mm", "free"],
+        "columns": {3: ["250 mm x 300 mm x 4.0 m"] * 2}, "shape": "L", "h_f": "183 mm",
+        "tributary_width": "1.6 m", "spacing": "3.4 m", "f_c": "25 MPa", "grade": "500R",
+        "coating": "epoxy", "superimposed": "2.2 kPa", "use": "office", "cover": "40 mm",
+        "slab_bars": "2 x 10M at 300 mm",
+    },
     "top bars of a shallow end that run on into a deeper span": {  # 1.3 times the length there
         "spans": ["1.1 m", "5.3 m"], "supports": ["free", "wall 600 mm", "column 300 mm"],
         "h": ["500 mm", "300 mm"], "b_w": "470 mm", "shape": "rectangular", "h_f": None,

@@ -117,8 +117,9 @@ def test_a_piece_of_a_bar_laps_the_next_piece_of_it_and_not_like_bars_that_end_t
 
 
 def test_long_overlap_is_no_lap() -> None:
-    """3 m of 25M side by side are two sets of bars."""
-    assert not lapped(bottom(0.0, 5000.0, 2), bottom(2000.0, 7000.0, 2))
+    """4 m of 25M side by side, 159 diameters, are two sets of bars; 3 m may be a lap."""
+    assert not lapped(bottom(0.0, 6000.0, 2), bottom(2000.0, 8000.0, 2))
+    assert lapped(bottom(0.0, 5000.0, 2), bottom(2000.0, 7000.0, 2))
 
 
 def test_tension_with_shear_by_hand_check_9b() -> None:
