@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 from decimal import Decimal
 from typing import Any
 
@@ -84,9 +85,13 @@ def start_sheet(f_r: float = F_R) -> Sheet:
 
 
 def given_span(
-    sheet: Sheet, section: numbers.SpanSection, number: int, loads: Sequence[Load] = ()
+    sheet: Sheet,
+    section: numbers.SpanSection,
+    number: int,
+    loads: Sequence[Load] = (),
+    service: ServiceMoments | None = None,
 ) -> record.SpanEntries:
-    """Record what a span is and return its entries; local loads of the span that act on it."""
+    """Record what a span is and return its entries, with local loads as they act in ``service``."""
     with sheet.part(f"span-{number}", f"Span {number}"):
         sheet.given("l", f"{section.l} mm")
         sheet.given("l_n", f"{section.l_n} mm", unit="m")
@@ -94,8 +99,10 @@ def given_span(
         sheet.given("b_f", f"{B_F} mm")
         for formula in (flange.AREA_TEE, flange.CENTROID_TEE, flange.INERTIA_TEE):
             sheet.line(formula)
-        local = [_local(sheet, load, i) for i, load in enumerate(_local_of(loads, number))]
+        local = [_local(sheet, load, i) for i, load in enumerate(local_of(loads, number))]
     own = sheet.entries_of(f"span-{number}")
+    if service is not None:
+        local = acting(local, local_of(loads, number), service)
     places = {
         name: _place(sheet, number, name, place)
         for name in ("midspan", "left", "right", "top")
@@ -109,7 +116,15 @@ def given_span(
     )  # fmt: skip
 
 
-def _local_of(loads: Sequence[Load], span: int) -> list[PointLoad | PartialLoad]:
+def acting(
+    local: Sequence[LocalLoad], loads: Sequence[PointLoad | PartialLoad], service: ServiceMoments
+) -> list[LocalLoad]:
+    """Return local loads with the factors that they have in the stages of a span."""
+    pairs = zip(local, loads, strict=True)
+    return [replace(at, factors=service.factors_on(load.kind, load.span)) for at, load in pairs]
+
+
+def local_of(loads: Sequence[Load], span: int) -> list[PointLoad | PartialLoad]:
     return [x for x in loads if isinstance(x, PointLoad | PartialLoad) and x.span == span]
 
 
@@ -126,7 +141,7 @@ def _local(sheet: Sheet, load: PointLoad | PartialLoad, i: int) -> LocalLoad:
             "x_1": sheet.given(f"s_{i}", f"{load.start} mm", unit="m"),
             "x_2": sheet.given(f"e_{i}", f"{load.end} mm", unit="m"),
         }
-    return LocalLoad(bound, load.kind == "L", share)
+    return LocalLoad(bound, {}, share)
 
 
 def _place(sheet: Sheet, number: int, name: str, place: numbers.Place) -> dict[str, Entry]:

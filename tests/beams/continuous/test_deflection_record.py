@@ -17,11 +17,15 @@ from lineproof.sheet import Sheet
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
 from .deflecting import (
+    E_C,
     F_R,
     FLOOR,
     PARTITIONS,
+    acting,
     beam_of,
     given_span,
+    gross,
+    local_of,
     record_span,
     section_of,
     start_sheet,
@@ -40,6 +44,8 @@ LOCAL: tuple[Load, ...] = (
     PartialLoad("L", 2, 8, 2000, 6000),
     PointLoad("D", 1, 25e3, 500), PartialLoad("D", 1, 9, 100, 900),
 )  # fmt: skip
+POSTS: tuple[Load, ...] = (PointLoad("S", 2, 60e3, 4600), PartialLoad("S", 2, 5, 1000, 3000))
+DEEP_SNOW: tuple[Load, ...] = (PointLoad("S", 2, 90e3, 4000), PartialLoad("S", 1, 30, 0, 7600))
 THREE = beam_of([7600, 9200, 7600], ["simple"] * 4)
 TIP_LEFT = beam_of([1800, 9200, 7600], ["free", "simple", "simple", "simple"])
 LONE = beam_of([7600], ["simple"] * 2)
@@ -59,6 +65,9 @@ CASES: dict[str, tuple[Beam, int, tuple[Load, ...], dict[str, Any]]] = {
     "other end span": (THREE, 3, UNIFORM, {}),
     "simple span": (LONE, 1, UNIFORM, {}),
     "point and partial loads": (THREE, 2, (*UNIFORM, *LOCAL), {}),
+    "snow beside live load": (THREE, 2, (*UNIFORM, *LOCAL, *POSTS), {}),
+    "live load beside snow": (THREE, 2, (*UNIFORM, *LOCAL, *DEEP_SNOW), {}),
+    "snow on one span alone": (THREE, 1, (*UNIFORM, *POSTS), {}),
     "compression bars": (THREE, 2, UNIFORM, {"midspan": DOUBLE}),
     "short span between long ones": (CORRIDOR, 2, UNIFORM, {"top": TOP}),
     "short span that does not crack": (CORRIDOR, 2, LIGHT, {}),
@@ -74,7 +83,7 @@ def recorded(
     section = section_of(beam, span, **changes)
     service = service_moments(beam, loads, span)
     sheet = start_sheet(f_r=section.f_r)
-    entries = given_span(sheet, section, span, loads)
+    entries = given_span(sheet, section, span, loads, service)
     record_span(sheet, entries, service, carries=carries)
     return numbers.deflections(section, service.stages, carries=carries), sheet.close()
 
@@ -115,6 +124,23 @@ def test_record_equals_the_numbers_and_is_followed_by_hand(name: str) -> None:
     assert list(faults(made.data)) == []
 
 
+def test_snow_that_accompanies_counts_with_its_factor() -> None:
+    """A post at midspan of a simple span that does not crack, by hand.
+
+    1.0D + 1.0L + 0.35S (NBC 4.1.3.4): 22 + 15 = 37 N/mm and 0.35*60 = 21 kN over 7600 mm; the
+    deflection of beam tables is 5 w l^4/(384 EI) + P l^3/(48 EI). Dead load alone has no post.
+    """
+    loads = (UniformLoad("D", 1, 22.0), UniformLoad("L", 1, 15.0), PointLoad("S", 1, 60e3, 3800))
+    _, made = recorded(LONE, 1, loads, {"f_r": 10 * F_R}, PARTITIONS)
+
+    I_g, _ = gross()
+    of_all = 5 * 37 * 7600**4 / 384 + 21e3 * 7600**3 / 48
+    of_dead = 5 * 22 * 7600**4 / 384
+    at = "deflection-1"
+    assert value(made, f"{at}-all/delta_DL") == pytest.approx(of_all / (E_C * I_g), rel=EXACT)
+    assert value(made, f"{at}-dead/delta_D") == pytest.approx(of_dead / (E_C * I_g), rel=EXACT)
+
+
 def test_branches_are_those_meant() -> None:
     """The cases above reach the web, count compression bars, and stay uncracked."""
     _, web = recorded(*CASES["axis in the web"], PARTITIONS)
@@ -130,19 +156,23 @@ def tip(sheet: Sheet, loads: Sequence[Load], **choices: Any) -> tuple[Any, Any]:
     """Record the span behind and the cantilever; return the cantilever in numbers, its record."""
     back = section_of(TIP_LEFT, 2)
     behind = service_moments(TIP_LEFT, loads, 2)
-    entries = given_span(sheet, back, 2, loads)
+    entries = given_span(sheet, back, 2, loads, behind)
     record_span(sheet, entries, behind, carries=FLOOR, calculate=True)
     found = numbers.deflections(back, behind.stages, carries=FLOOR)
     inertia = {stage: result.I_ea for stage, result in found.stages.items()}
     section = section_of(TIP_LEFT, 1, behind=numbers.Behind(9200, inertia))
     service = service_moments(TIP_LEFT, loads, 1)
-    own = given_span(sheet, section, 1, loads)
-    own = replace(own, behind=2, l_behind=sheet.entry("span-2/l"), local_behind=entries.local)
+    own = given_span(sheet, section, 1, loads, service)
+    there = acting(entries.local, local_of(loads, 2), service)
+    own = replace(own, behind=2, l_behind=sheet.entry("span-2/l"), local_behind=there)
     record_span(sheet, own, service, **choices)
     return numbers.deflections(section, service.stages, carries=choices["carries"]), sheet.close()
 
 
-@pytest.mark.parametrize("loads", [UNIFORM, (*UNIFORM, *LOCAL)], ids=["uniform", "local"])
+TIP_LOADS = [UNIFORM, (*UNIFORM, *LOCAL), (*UNIFORM, *LOCAL, *POSTS, PointLoad("S", 1, 20e3, 300))]
+
+
+@pytest.mark.parametrize("loads", TIP_LOADS, ids=["uniform", "local", "snow"])
 def test_cantilever_with_the_rotation_of_its_root(loads: tuple[Load, ...]) -> None:
     found, made = tip(start_sheet(), loads, carries=FLOOR, calculate=True)
 

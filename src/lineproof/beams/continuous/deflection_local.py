@@ -6,6 +6,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from lineproof.beams.continuous.case_forces import factor_text
 from lineproof.beams.continuous.deflection_service import (
     FreeEnd,
     Point,
@@ -25,13 +26,14 @@ Sums = Mapping[Stage, Entry]
 class LocalLoad:
     """A point load (P_s at x_P) or a partial load (w_p from x_1 to x_2), as recorded.
 
-    Stations from the left axis of the span. ``live`` load acts in the stage of all load, and with
-    ``share`` of it in the sustained stage (None: nothing of it); on the span behind a cantilever it
-    acts only where the tip is lifted. Sizes are those of the stage of all load.
+    Stations from the left axis of the span. ``bound`` holds sizes as specified; ``factors`` are
+    those of its load type on its span by stage, as the moments of the stages have them: one that
+    accompanies another load acts in part, one that does not act in a stage is absent. ``share`` is
+    the sustained part that the factor of the sustained stage holds (None: none is typed of it).
     """
 
     bound: Mapping[str, Entry]
-    live: bool = False
+    factors: Mapping[Stage, float]
     share: Entry | None = None
 
     @property
@@ -43,27 +45,20 @@ class LocalLoad:
 def record_local(
     steps: Steps, loads: Sequence[LocalLoad], *, cantilever: FreeEnd, behind: bool = False
 ) -> Sums:
-    """Record inside the open part what every load adds, and the sum at every stage.
+    """Record inside the open part what every load that acts adds, and the sum at every stage.
 
     ``cantilever`` is its free end, or "" for a span; ``behind`` for loads on the span behind it.
     """
     made: list[tuple[LocalLoad, Entry]] = []
     letter = "b" if behind else ""
-    for load in loads:
+    for load in (each for each in loads if each.factors):
         for P_s, x_P in _points(steps, load, len(made), letter, halved=behind or not cantilever):
             place = f"{letter}{len(made) + 1}"
             made.append((load, _addition(steps, P_s, x_P, place, cantilever, behind=behind)))
-    terms: dict[Stage, list[tuple[LocalLoad, Entry]]] = {
-        "dead": [t for t in made if not t[0].live],
-        "sustained": [t for t in made if not t[0].live or t[0].share is not None],
-        "all": made,
-        "rise": [t for t in made if not t[0].live],
-    }
-    if behind:  # live load on the span behind acts where the tip is lifted, and only there
-        terms |= {"sustained": terms["dead"], "all": terms["dead"], "rise": made}
     sums: dict[Stage, Entry] = {}
     recorded: dict[str, Entry] = {}
-    for stage, rows in terms.items():
+    for stage in _ENDINGS:
+        rows = [each for each in made if stage in each[0].factors]
         words = " + ".join(_term(load, entry, stage) for load, entry in rows)
         if rows and words not in recorded:
             recorded[words] = _sum(steps, stage, letter, words, rows)
@@ -133,8 +128,10 @@ _SUMMED: Mapping[Stage, str] = {
 
 
 def _term(load: LocalLoad, entry: Entry, stage: Stage) -> str:
-    share = load.share if load.live and stage == "sustained" else None
-    return entry.symbol if share is None else f"{share.symbol}*{entry.symbol}"
+    share = load.share if stage == "sustained" else None
+    factor = load.factors[stage if share is None else "all"]
+    words = entry.symbol if share is None else f"{share.symbol}*{entry.symbol}"
+    return words if factor == 1 else f"{factor_text(factor)}*{words}"
 
 
 def _sum(
@@ -156,10 +153,13 @@ def points_at(loads: Sequence[LocalLoad], l: float) -> tuple[Point, ...]:
     """Return the loads of the stage of all load as point loads, for curvatures of a span."""
     made: list[Point] = []
     for load in loads:
+        factor = load.factors.get("all", 0.0)
+        if not factor:
+            continue
         if not load.partial:
-            made.append(Point(load.bound["P_s"].value, load.bound["x_P"].value))
+            made.append(Point(factor * load.bound["P_s"].value, load.bound["x_P"].value))
             continue
         w, start, end = (float(load.bound[name].value) for name in ("w_p", "x_1", "x_2"))
         for x_1, x_2 in pieces(start, end, l, halved=True):
-            made += two_points(w, x_1, x_2)
+            made += two_points(factor * w, x_1, x_2)
     return tuple(made)

@@ -112,6 +112,11 @@ class ServiceMoments:
         """The spans with live load that lift the span in words; "" where that cannot govern."""
         return loaded_spans(self.rise_spans) if "rise" in self.stages else ""
 
+    def factors_on(self, kind: str, span: int) -> dict[Stage, float]:
+        """Return the factors of a load type on a span by stage; stages without it are absent."""
+        found = {stage: each.get((kind, span), 0.0) for stage, each in self.factors.items()}
+        return {stage: factor for stage, factor in found.items() if factor}
+
 
 def free_end(beam: Beam, span: int) -> FreeEnd:
     """Return which end of a span is free."""

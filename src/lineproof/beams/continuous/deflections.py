@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import replace
 
+from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.deflection import History
 from lineproof.beams.continuous.deflection_hinges import (
     continuous_with,
@@ -37,7 +38,7 @@ from lineproof.beams.continuous.deflection_top import (
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import bars_of
 from lineproof.beams.continuous.geometry import span_place
-from lineproof.beams.continuous.model import GIVEN, Model, SingleLoad
+from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.service import record_construction, service_lines
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry
@@ -98,7 +99,7 @@ def _record_span(design: Design, service: ServiceMoments, r_Ls: Entry, *, asked:
     free = free_end(model.forces.beam, span)
     if not free:
         record_bottom(design, span)
-    entries = _entries_of(model, span, r_Ls)
+    entries = _entries_of(model, service, r_Ls)
     asked = asked or is_calculated(model.sheet, entries, model.inputs.carries)
     earlier = _earlier(model, span)
     before = earlier["M_aem"].value if "M_aem" in earlier else 0.0
@@ -158,8 +159,8 @@ def _record_share(model: Model) -> Entry:
         return model.sheet.given("r_Ls", share, source=said)
 
 
-def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
-    sheet, beam = model.sheet, model.forces.beam
+def _entries_of(model: Model, service: ServiceMoments, r_Ls: Entry) -> SpanEntries:
+    sheet, beam, span = model.sheet, model.forces.beam, service.span
     place = span_place(sheet, model.inputs, span)
     free = free_end(beam, span)
     behind = span_behind(beam, span) if free else None
@@ -176,8 +177,8 @@ def _entries_of(model: Model, span: int, r_Ls: Entry) -> SpanEntries:
         free,
         behind,
         None if behind is None else model.lengths[behind - 1],
-        tuple(_local(load, r_Ls) for load in model.on_span(span)),
-        () if behind is None else tuple(_local(load, r_Ls) for load in model.on_span(behind)),
+        _local(model, service, span, r_Ls),
+        () if behind is None else _local(model, service, behind, r_Ls),
         by_columns=(_by_columns(model, span), _by_columns(model, span + 1)),
     )
 
@@ -204,11 +205,14 @@ def top_at(model: Model, support: int, side: str) -> Mapping[str, Entry] | None:
     return None
 
 
-def _local(load: SingleLoad, r_Ls: Entry) -> LocalLoad:
-    """Return a single load as the record of deflections takes it."""
-    names = {"P_s": load.size, "x_P": load.at}
-    if load.at is None:
-        names = {"w_p": load.size, "x_1": load.start, "x_2": load.end}
-    bound = {name: entry for name, entry in names.items() if entry is not None}
-    live = load.kind != "D"
-    return LocalLoad(bound, live, r_Ls if load.kind in ("L", "L_st") else None)
+def _local(model: Model, service: ServiceMoments, span: int, r_Ls: Entry) -> tuple[LocalLoad, ...]:
+    """Return the single loads on a span as the record of deflections takes them."""
+    made = []
+    for load in model.on_span(span):
+        names = {"P_s": load.size, "x_P": load.at}
+        if load.at is None:
+            names = {"w_p": load.size, "x_1": load.start, "x_2": load.end}
+        bound = {name: entry for name, entry in names.items() if entry is not None}
+        factors = service.factors_on(load.kind, span)
+        made.append(LocalLoad(bound, factors, r_Ls if load.kind in LIVE else None))
+    return tuple(made)
