@@ -383,6 +383,7 @@ INTERFACE = (
 )
 BEARING = (
     W("bearing.LOADED_AREA", {"b_w": 350, "l_b": 200}, "350*200 = 70000"),
+    W("bearing.LOADED_AREA_NARROW", {"b_w": 350, "b_col": 250, "l_b": 200}, "250*200 = 50000"),
     W(
         "bearing.RESISTANCE",
         {"phi_c": 0.65, "f_c": 35, "A_1": 70000, "A_2": 157500},

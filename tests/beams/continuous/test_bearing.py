@@ -13,6 +13,7 @@ from lineproof.beams.continuous.bearing import (
 from lineproof.beams.steps import Steps
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
+from .flow import CALLS, close_anyway, run, start
 from .shear_models import BASIS, DEAD_ONLY, case_of, new_sheet, number, uniform
 
 
@@ -53,4 +54,19 @@ def test_bearing() -> None:
         record_bearing(steps)
     made = sheet.close()
     assert number(made, "bearing-1/B_r") == pytest.approx(1343.7, rel=5e-3)
+    assert not list(faults(made.data))
+
+
+def test_a_column_narrower_than_the_beam_gives_the_width_of_the_bearing() -> None:
+    """A beam 380 wide on columns of 450 mm along and 250 or 600 mm across it.
+
+    250 x 450 = 112500 mm2 and 0.85 x 0.65 x 32 x 112500 = 1989 kN; of the wider column the width
+    of the beam: 380 x 450 = 171000 mm2 and 3023 kN.
+    """
+    columns = {2: ["450 mm x 250 mm x 3.6 m"], 3: ["450 mm x 600 mm x 3.6 m"]}
+    made = close_anyway(run(start(columns=columns, slab_bars="2 x 10M at 300 mm"), CALLS[:5]))
+    assert number(made, "support-2/A_1") == 112500
+    assert number(made, "support-2/B_r") == pytest.approx(1989, abs=5)
+    assert number(made, "support-3/A_1") == 171000
+    assert number(made, "support-3/B_r") == pytest.approx(3023, abs=5)  # three digits
     assert not list(faults(made.data))

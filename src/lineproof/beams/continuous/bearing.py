@@ -43,12 +43,14 @@ def record_hangers(steps: Steps, number: int) -> None:
     steps.check(shear_bars.HANGERS_PROVIDED)
 
 
-def record_bearing(steps: Steps) -> None:
+def record_bearing(steps: Steps, *, narrow: bool = False) -> None:
     """Record inside the open part the bearing of the beam on its support.
 
-    Needs R_f, b_w and the length of the bearing l_b in place. The supporting surface counts no
-    larger than the loaded area.
+    Needs R_f, b_w and the length of the bearing l_b in place; on a column that is ``narrow``, less
+    wide across than the beam, its width b_col as well. The supporting surface counts no larger than
+    the loaded area.
     """
-    steps.bind(A_2=steps.line(bearing.LOADED_AREA))
+    area = bearing.LOADED_AREA_NARROW if narrow else bearing.LOADED_AREA
+    steps.bind(A_2=steps.line(area))
     steps.line(bearing.RESISTANCE)
     steps.check(bearing.STRENGTH)

@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 
+from lineproof.beams.continuous.anchorage_record import plain
 from lineproof.beams.continuous.bars_counted import record_area
 from lineproof.beams.continuous.bearing import (
     hangers_needed,
@@ -209,7 +211,12 @@ def _record_supports(design: Design, alike: Mapping[str, Entry]) -> None:
                 record_hangers(steps, hangers_needed(design.stirrups.basis, R_f.value))
             else:
                 steps.bind(l_b=model.sheet.entry(f"{GIVEN}/b_s{number}"))
-                record_bearing(steps)
+                breadth = design.designed.breadths.get(number, math.inf)
+                narrow = breadth < design.outline.b_w
+                if narrow:
+                    across = plain(breadth, "mm")
+                    steps.bind(b_col=model.sheet.given("b_col", across, source="column"))
+                record_bearing(steps, narrow=narrow)
 
 
 def _record_interfaces(design: Design) -> None:

@@ -14,6 +14,13 @@ _criterion = partial(criterion, notation=NOTATION)
 LOADED_AREA = _formula(
     "A_1 = b_w*l_b", clause="10.8.1", title="Loaded area of the bearing", basis=MECHANICS
 )
+LOADED_AREA_NARROW = _formula(
+    "A_1 = min(b_w, b_col)*l_b",
+    unit="mm2",
+    clause="10.8.1",
+    title="Loaded area of the bearing, on a column narrower than the beam",
+    basis=MECHANICS,
+)
 RESISTANCE = _formula(
     "B_r = 0.85*phi_c*f_c*A_1*min(sqrt(A_2/A_1), 2)",
     clause="10.8.1",
@@ -30,5 +37,5 @@ STRENGTH = _criterion(
     key="bearing",
 )
 
-FORMULAS = (LOADED_AREA, RESISTANCE)
+FORMULAS = (LOADED_AREA, LOADED_AREA_NARROW, RESISTANCE)
 CRITERIA = (STRENGTH,)
