@@ -245,3 +245,36 @@ def test_two_layers_developed_in_part_are_counted_whole_for_cracks() -> None:
     assert face["steel-for-moment"]["right"] < 200 * standing  # those that count for the moment
     assert "hog-1-right/crack-control" not in record.failed
     assert recompute(record) == []
+
+
+HOOKS = {"hook_start": "90", "hook_end": "90"}
+HOOKED: list[dict[str, str]] = [
+    {"face": "bottom", "bars": "3-20M", "start": "-0.1 m", "end": "6.1 m", **HOOKS},
+    {"face": "top", "bars": "2-15M", "start": "-0.1 m", "end": "6.1 m"},
+]
+
+
+def test_ties_around_hooks_are_not_invented_where_bars_and_stirrups_are_given() -> None:
+    """3-20M hooked in walls of 300 mm, cover 30 mm to stirrups 10M: 41.3 mm, below 60.
+
+    Ties are asked for (12.5.4) and none are given: l_dh = 100 x 19.5/sqrt(32) = 344.7 mm without
+    the factor for ties, and 900 x (300 - 50)/344.7 = 652.7 mm2 count at the face. With the
+    stirrups left open the ties are laid and stand in the schedule.
+    """
+    given: dict[str, Any] = {
+        "spans": ["6 m"], "supports": ["wall 300 mm"] * 2, "bar_runs": HOOKED,
+    }  # fmt: skip
+    beam = flow.start(**given, stirrups=[{"span": 1, "spacing": "250 mm"}])
+    sheet = flow.run(beam)
+    made = sheet.close()
+    hook = "anchorage-end-1-hook-20m"
+    assert made.entries[f"{hook}/l_dh"]["value"] == pytest.approx(344.7, abs=0.1)
+    assert made.entries["anchorage-end-1-bottom/A_sd"]["value"] == pytest.approx(652.7, abs=0.2)
+    assert f"{hook}/s_tie" not in made.entries
+    assert "NOT checked here" in made.entries[f"{hook}/no-ties"]["text"]
+    assert not any(zone.around_hooks for zone in beam.design.detailing.stirrups)
+    assert "12.5.4" in [each["clause"] for each in sheet.not_covered]
+
+    laid = flow.start(**given)
+    assert "12.5.4" not in [each["clause"] for each in flow.run(laid).not_covered]
+    assert any(zone.around_hooks for zone in laid.design.detailing.stirrups)

@@ -205,7 +205,7 @@ def room_beside(designed: Designed, spans: list[int]) -> float:
 
 @dataclass(frozen=True, slots=True)
 class HookLength:
-    """A 90 degree hook at an end of the beam: covers, whether it is tied, its length [mm]."""
+    """A 90 degree hook at an end of the beam: covers, whether ties are laid, its length [mm]."""
 
     size: str
     c_side: float
@@ -232,6 +232,7 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
     """Return the hook of a bar at an end of the beam.
 
     ``outside`` says that the bar stands in an overhang, where the ties of the web earn it nothing.
+    Of a beam as built no ties are known.
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     s = designed.strengths
@@ -245,7 +246,7 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
     )  # fmt: skip
     side = holds(hooks.SIDE_COVERED, c_side=c_side)
     reduced = side and holds(hooks.TAIL_COVERED, c_tail=c_tail) and holds(laps.LAPPABLE, d_b=d_b)
-    tied = not (side and holds(hooks.FACE_COVERED, c_top=c_top))
+    tied = not (designed.as_built or (side and holds(hooks.FACE_COVERED, c_top=c_top)))
     ties = TIED_ROW if tied and not outside else UNTIED_ROW
     l_hb = value(basic, d_b=d_b, f_c=s.f_c, f_y=s.f_y)
     l_dh = value(

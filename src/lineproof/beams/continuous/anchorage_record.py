@@ -37,6 +37,11 @@ BY_GENERAL = "The development length is that of the general expression; the tabl
 
 _OUTSIDE = "In the overhangs bars stand outside the ties: the factor for ties is not used."
 TIED_IN_WEB = "Ties around the hooks within the web, of small cover where the beam ends"
+_NO_TIES = (
+    "Where the cover is so small, ties must stand around the hooks. Bars and stirrups are those "
+    "given, which hold no such ties: none are laid or counted. Whether they stand there is NOT "
+    "checked here; the calculation lists it as not covered."
+)
 TIES_IN_JOINT = (
     "The hooks of the bars in the overhangs stand outside the ties of the beam and are NOT tied "
     "here: the design of what carries the beam must show ties around them in the joint, at most "
@@ -276,7 +281,8 @@ def record_hook(
     steps.line(hooks.FACE_COVER)
     side, tail = steps.decide(hooks.SIDE_COVERED), steps.decide(hooks.TAIL_COVERED)
     face = steps.decide(hooks.FACE_COVERED)
-    tied = not (side and face)
+    asked = not (side and face)
+    tied = asked and not designed.as_built
     reduced = bool(side and tail) and steps.holds(laps.LAPPABLE)
     if tied and outside:
         sheet.note("outside", _OUTSIDE, title="Ties around the hooks", clause="12.5.3")
@@ -284,6 +290,8 @@ def record_hook(
     steps.lines(basic, hooks.L_DH)
     if tied:
         _record_ties(steps, designed, ties, outside=outside)
+    elif asked:
+        sheet.note("no-ties", _NO_TIES, title="Ties around the hooks", clause="12.5.4")
     return steps.place
 
 

@@ -7,7 +7,7 @@ from dataclasses import replace
 from typing import Any
 
 from lineproof.beams import basics
-from lineproof.beams.continuous import faces, flexure, interface
+from lineproof.beams.continuous import faces, flexure, interface, numbers
 from lineproof.beams.continuous import loads as load_take_down
 from lineproof.beams.continuous.anchorage_chapter import record_anchorage, record_ends
 from lineproof.beams.continuous.coefficients import record_coefficients
@@ -50,6 +50,8 @@ from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.record import Part
 from lineproof.sheet import Sheet, Trial
+from lineproof.standards.a23_3 import hooks
+from lineproof.standards.a23_3.bars import BARS
 from lineproof.standards.codes import CodePair
 
 LOADS_CALL, SPANS_CALL, ANALYSIS_CALL = "beam.loads()", "beam.spans()", "beam.analysis()"
@@ -308,9 +310,22 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
         rows.append({"check": "Torsion from the slab: no torque is given", "clause": "11.3.10"})
     if any(support.carrier == "girder" for support in inputs.supports):
         rows.append({"check": "Torsion of the girders by the end moments", "clause": "11.3.10"})
+    if _ties_unknown(inputs):
+        what = "Ties around the hooks where the beam ends: none are given with bars and stirrups"
+        rows.append({"check": what, "clause": "12.5.4"})
     if not inputs.slab:
         rows.append({"check": "Fire resistance of the floor carried", "clause": "NBC D-2.2"})
     return [*rows, *_loads_not_here(inputs)]
+
+
+def _ties_unknown(inputs: ContinuousInputs) -> bool:
+    """Tell whether hooks of a beam as built have so small a cover that they ask for ties."""
+    hooked = any(
+        row.get(end) for row in inputs.bar_runs or () for end in ("hook_start", "hook_end")
+    )
+    d_bs = BARS.number(inputs.stirrup, "d_b")
+    c_top = numbers.value(hooks.FACE_COVER, {"c_c": inputs.cover.value, "d_bs": d_bs})
+    return inputs.as_built and hooked and not numbers.holds(hooks.FACE_COVERED, {"c_top": c_top})
 
 
 def _loads_not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:

@@ -146,7 +146,8 @@ class Designed:
     ``stock`` the longest bar. ``end_forces`` [N] of 11.3.9.5 by
     support number replace those found here. ``torsion`` is known, by span, where torsion counts:
     there the bottom bars run through. ``restrained`` holds the numbers of the end supports that are
-    analysed as simple and designed for an assumed restraint.
+    analysed as simple and designed for an assumed restraint. ``as_built`` tells that bars and
+    stirrups are both given: nothing is laid beside them, no ties around hooks either.
     """
 
     basis: Basis
@@ -161,6 +162,7 @@ class Designed:
     end_forces: Mapping[int, float] = field(default_factory=dict)
     torsion: Mapping[int, TorsionForces] = field(default_factory=dict)
     restrained: frozenset[int] = frozenset()
+    as_built: bool = False
 
     @property
     def outline(self) -> BeamOutline:

@@ -138,6 +138,11 @@ class ContinuousInputs:
         return self.bar_runs is not None or any((*self.bottom_bars, *self.top_bars))
 
     @property
+    def as_built(self) -> bool:
+        """Whether both the bars along the beam and the stirrups are given."""
+        return self.bar_runs is not None and self.stirrups is not None
+
+    @property
     def live_kind(self) -> str:
         """The load type of the live load on the floor."""
         return "L_st" if self.use in STORED else "L"
