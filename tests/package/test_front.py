@@ -106,6 +106,35 @@ def test_a_high_drawing_does_not_stand_before_the_heading_of_its_summary(holding
     assert "Summary, B9" in texts[first]
 
 
+def test_a_page_of_drawings_does_not_begin_with_a_gap(holding: Record) -> None:
+    """The second drawing, 100 mm high, has no room below the first of 150 mm: it heads a page.
+
+    A page is 792 points high; its text ends 19 mm (54 points) above its foot and is 236 mm high.
+    The line below a drawing at its head is then above the middle, at its foot below it.
+    """
+    made = copy.deepcopy(holding)
+    for entry in (e for p in made["parts"] for e in p["entries"]):
+        if entry["id"] in (FRONT[0], FRONT[3]):
+            entry["figure"]["height"] = 150.0 if entry["id"] == FRONT[0] else 100.0
+    reader = pypdf.PdfReader(io.BytesIO(to_pdf(build_package([made]))))
+    low = [height(page, FIGURES[1]) for page in reader.pages]
+    captions = [at for at in low if at is not None]
+    assert captions
+    assert captions[0] > 792 / 2
+
+
+def height(page: pypdf.PageObject, wanted: str) -> float | None:
+    """Return how high above the foot of a page a text stands, in points; None where it does not."""
+    found: list[float] = []
+
+    def visit(text: str, matrix: Any, text_matrix: Any, _font: Any, _size: float) -> None:
+        if wanted in text:
+            found.append(matrix[5] + text_matrix[5] * matrix[3])
+
+    page.extract_text(visitor_text=visit)
+    return found[0] if found else None
+
+
 def test_the_working_points_to_what_stands_in_front(holding: Record) -> None:
     html = to_html(build_package([holding]))
     working = html[html.index('id="sheet-working"') :]

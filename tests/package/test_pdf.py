@@ -8,6 +8,7 @@ import json
 import re
 import unicodedata
 from concurrent.futures import ThreadPoolExecutor
+from dataclasses import replace
 from typing import Any
 
 import pypdf
@@ -16,7 +17,9 @@ import pytest
 from lineproof.errors import UserError
 from lineproof.package import build_package, records_in_pdf, to_pdf
 from lineproof.package.pdf import PrintError, compile_pdf
+from lineproof.package.summary import Confirmation
 from lineproof.resources import folder
+from lineproof.sheet import Sheet
 
 from .noted import noted
 
@@ -184,6 +187,44 @@ def test_characters_without_a_glyph_are_shown_by_code(
 
     assert shown in letters(text)
     assert "shown by their code" in text
+
+
+@pytest.mark.parametrize("lines", [30, 38, 46])
+def test_the_heads_of_the_working_do_not_stand_over_the_notation(lines: int) -> None:
+    """Of 38 lines the working fills its page, and the notation begins the next one alone."""
+    alone = lines == 38
+    sheet = Sheet("B1", "Widths")
+    with sheet.part("given", "Given"):
+        for number in range(lines):
+            sheet.given(f"b_{number}", "300 mm", f"width {number}")
+    pages = pypdf.PdfReader(io.BytesIO(printed(sheet.close().data))).pages
+    texts = [" ".join(page.extract_text().split()) for page in pages]
+    (first,) = (text for text in texts if "Notation Symbol Meaning Unit" in text)
+    before = first[: first.index("Notation Symbol")]
+    assert ("Width" in before) != alone
+    assert ("Clause Working Result" in before) != alone
+
+
+def test_a_clause_to_confirm_stands_whole_on_one_page(record: Record) -> None:
+    """Forty clauses of four to six lines each, on several pages: none is parted."""
+    package = build_package([record])
+    items = tuple(
+        Confirmation(
+            f"9.{n}",
+            f"begin{n}z {'words of the rule ' * (10 + n % 7)}end{n}z",
+            "from memory",
+            "",
+            (),
+        )
+        for n in range(40)
+    )
+    calc = replace(package.calcs[0], confirm=items)
+    reader = pypdf.PdfReader(io.BytesIO(to_pdf(replace(package, calcs=(calc,)))))
+    pages = [page.extract_text() for page in reader.pages]
+    for n in range(40):
+        held = [page for page in pages if f"begin{n}z" in page]
+        assert len(held) == 1
+        assert f"end{n}z" in held[0]
 
 
 def test_a_title_of_ten_thousand_characters_is_printed_whole(record: Record) -> None:

@@ -49,6 +49,7 @@ if TYPE_CHECKING:
     import jinja2
 
     from lineproof.package.calc import Calc
+    from lineproof.package.merged import ToConfirm
     from lineproof.package.summary import NotationRow, PartSummary
 
 _NODES = (
@@ -230,6 +231,7 @@ def _filters() -> dict[str, Any]:
         "fails": fails,
         "short_cells": _short_cells,
         "on_one_page": _on_one_page,
+        "longer_than_page": _longer_than_page,
         "heading": _heading,
         "text_size": _text_size,
         "table_heights": table_heights,
@@ -279,6 +281,13 @@ def _on_one_page(table: PrintedTable) -> bool:
     """Tell whether a table surely has room on one page, by the letters of its longest cells."""
     lines = sum(math.ceil(max(map(len, row), default=0) / _LETTERS) or 1 for row in table.rows)
     return len(table.rows) <= _PAGE_ROWS and lines <= _PAGE_LINES
+
+
+def _longer_than_page(item: ToConfirm) -> bool:
+    """Tell whether a clause to confirm might not have room on one page, beside any heading."""
+    words = math.ceil((len(item.what) + len(item.basis)) / _LETTERS)
+    numbers = sum(1 + len(lines) // 2 for _, lines in item.calcs)
+    return max(words, numbers) > _PAGE_LINES
 
 
 def _length_class(title: str) -> str:
