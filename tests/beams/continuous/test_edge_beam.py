@@ -239,6 +239,22 @@ def test_ratios_of_the_summary_are_those_of_its_columns(
         assert str(ratio) == row[-1], row
 
 
+def test_an_area_asked_for_stands_only_beside_the_moment_that_it_is_of(edge_beam: Edge) -> None:
+    """At support 2 it is worked at the right face, for 251.2 kN.m; the left one has 240.5 kN.m.
+
+    a = 560.7 - sqrt(560.7**2 - 2*M/(0.802*0.65*32*380)), A = 0.802*0.65*32*380*a/(0.85*400).
+    """
+    k = 0.802 * 0.65 * 32 * 380
+    right, left = (
+        k * (560.7 - math.sqrt(560.7**2 - 2 * M / k)) / (0.85 * 400) for M in (251.2e6, 240.5e6)
+    )
+    rows = edge_beam[2].entries["summary/flexure"]["rows"]
+    cells = {row[0]: (row[2], row[3]) for row in rows}
+    assert cells["support 2, right"] == ("251", "1410")
+    assert cells["support 2, left"] == ("241", "–")
+    assert (round(right, -1), round(left, -1)) == (1410, 1350)
+
+
 def test_one_quantity_prints_with_the_same_digits_everywhere(
     edge_beam: Edge,
 ) -> None:

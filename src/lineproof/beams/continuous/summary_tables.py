@@ -152,10 +152,11 @@ def _moment_row(
     name: str, case: str, own: Mapping[str, Entry], bars: Mapping[str, Entry], text: str
 ) -> Row:
     check = own[flexure.STRENGTH.key]
-    needed = own["A_sr"] if "A_sr" in own else bars["A_sr"]
+    # Worked at one face only: the other's area would stand beside a moment that it is not of.
+    needed = printed(own["A_sr"].value, "mm2") if "A_sr" in own else NONE
     M_f, M_r = printed_sides(check, "kN.m")
     cells = (
-        name, case, M_f, printed(needed.value, "mm2"), text,
+        name, case, M_f, needed, text,
         printed(bars["A_s"].value, "mm2"), M_r, _ratio_of(check, M_f, M_r),
     )  # fmt: skip
     return Row(cells, check)
