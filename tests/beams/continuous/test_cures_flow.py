@@ -7,6 +7,7 @@ the beam weighs more, since the cure is told with the loads as they are.
 from __future__ import annotations
 
 from collections.abc import Mapping
+from itertools import pairwise
 from typing import Any
 
 import pytest
@@ -14,7 +15,7 @@ import pytest
 from lineproof import beams
 from lineproof.beams.continuous import beam as flow
 from lineproof.beams.continuous import cures_checks
-from lineproof.beams.continuous.cures_flow import NOT_SOUGHT
+from lineproof.beams.continuous.cures_flow import AS_ABOVE, NOT_SOUGHT
 from lineproof.beams.continuous.cures_replay import AnotherCaseError, Replay, bound_names
 from lineproof.beams.continuous.cures_tried import failing
 from lineproof.errors import UserError
@@ -291,6 +292,20 @@ def test_the_summary_lists_every_check_that_fails() -> None:
     assert len(told_of) == len(bad) > 6
     assert all("FAILS" in row[2] and row[3] for row in rows)
     assert all(any(s.startswith("cure-") for s in part.entries) for part, _ in bad)
+
+
+def test_cures_that_are_those_of_the_row_above_are_not_told_again() -> None:
+    """Of the existing beam: three checks of one gap in the top bars, and both sides in shear."""
+    sheet = existing(cures=True)
+    rows = sheet.entry("summary/failing").source.content["rows"]
+    told = [row[3] for row in rows]
+    pairs = list(pairwise(told))
+    assert told.count(AS_ABOVE) == 3
+    assert told[-2:] == [AS_ABOVE, AS_ABOVE]
+    assert told[-3].startswith("(a) further bars")
+    assert not [above for above, below in pairs if above == below != AS_ABOVE]
+    first = [row for row in rows if row[0].startswith("Shear of span")]
+    assert [row[3] == AS_ABOVE for row in first] == [False, True]
 
 
 def test_a_check_accepted_by_the_engineer_asks_for_no_cure() -> None:

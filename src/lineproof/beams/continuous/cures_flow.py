@@ -58,6 +58,9 @@ COLUMNS = [
 ]
 WIDTHS = (44.0, 44.0, 20.0, 0.0)
 TITLE = "What fails and what would cure it"
+AS_ABOVE = "as in the row above"
+_SHORT = 60
+"""Letters up to which cures are told again, though the row above has the same."""
 _DEFLECTIONS = (clause.LIVE_SMALL, clause.ATTACHED_SMALL, stages.RISE_SMALL)
 _BARS = ("A_s", "A_sd")
 """Areas of bars: in a gap, further bars are told with their length instead."""
@@ -151,8 +154,9 @@ def _size(design: Design) -> str:
 def failing_rows(design: Design, found: Found) -> Iterator[Row]:
     """Give a row for every check that fails, one for those of a part with the same cures.
 
-    Checks that lead stand first.
+    Checks that lead stand first. Cures that are those of the row before are not told again.
     """
+    above = ""
     for part in sorted(design.model.sheet.parts, key=lambda part: not _leads(part)):
         rows: dict[str, list[Entry]] = {}
         for check in failing(part):
@@ -160,7 +164,9 @@ def failing_rows(design: Design, found: Found) -> Iterator[Row]:
         for cure, checks in rows.items():
             worst = max(checks, key=lambda check: utilisation(check) or math.inf)
             titles = "; ".join(_title(check) for check in checks)
-            yield Row((part.title, begun(titles), ratio_text(worst), cure), worst)
+            shown = AS_ABOVE if cure == above and len(cure) > _SHORT else cure
+            yield Row((part.title, begun(titles), ratio_text(worst), shown), worst)
+            above = cure
 
 
 def _leads(part: Part) -> bool:
