@@ -22,6 +22,8 @@ NEAR = 1e-6
 """Distance within which a station and a load are at the same place [mm]."""
 _ROUNDED, _LEAST = 1e-4, 1e6
 """Part by which lines may differ from the analysis, and the least M or V it is of [N.mm, N]."""
+_NO_MOMENT = 1.0
+"""Size below which a moment is none but for round-off, and no face is in tension [N.mm]."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -275,7 +277,7 @@ class _Lines:
         moment, shear = self._section_terms(x.value)
         of = self.of
         V = self.demand.V if self.case.near == "left" else -self.demand.V
-        top = self.demand.M < 0
+        top = self.demand.M < -_NO_MOMENT
         kind = "Negative" if top else "Positive"
         text = signed(moment, negative=top)
         self._line(f"{of.M} = {text}", f"{kind} moment at the section: {self.title}")
