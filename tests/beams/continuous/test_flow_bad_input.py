@@ -357,8 +357,7 @@ def test_a_weight_that_does_not_go_with_the_density_of_the_concrete() -> None:
     matches(
         refused_at_start(gamma_c="2500 kg/m3"),
         "gamma_w: concrete of 2500 kg/m3 does not weigh the usual 24 kN/m3 with its steel; write "
-        "that of the reinforced concrete into the call that starts the beam, for example gamma_w = "
-        "'25.6 kN/m3'",
+        "that of the reinforced concrete, for example gamma_w = '25.6 kN/m3'",
     )
     matches(
         refused_at_start(gamma_w="20 kN/m3"),

@@ -53,8 +53,7 @@ def check_unit_weight(fields: Mapping[str, Any], faults: FaultList) -> None:
     elif not LEAST_NORMAL <= gamma_c.value <= USUAL_DENSITY:
         faults.add(
             f"gamma_w: concrete of {gamma_c.text} does not weigh the usual 24 kN/m3 with its "
-            f"steel; write that of the reinforced concrete into the call that starts the beam, for "
-            f"example gamma_w = {likely}"
+            f"steel; write that of the reinforced concrete, for example gamma_w = {likely}"
         )
 
 
