@@ -46,6 +46,21 @@ def test_a_calc_is_issued_into_one_folder_beside_it(
     assert said.err.splitlines() == [f"running {beam_file}", f"printing {folder}"]
 
 
+@pytest.mark.parametrize("into", ["", "  "])
+def test_an_empty_folder_is_not_the_one_that_is_open(
+    beam_file: Path, into: str, capsys: pytest.CaptureFixture[str], monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """As from a script whose variable is not set; nothing is written anywhere."""
+    monkeypatch.chdir(beam_file.parent)
+    before = files_in(beam_file.parent)
+    with pytest.raises(SystemExit) as stopped:
+        main(["issue", str(beam_file), "--into", into])
+    assert stopped.value.code == 2
+    said = capsys.readouterr().err
+    assert f"--into: {into!r} is no path; write the name of a file or folder" in said
+    assert files_in(beam_file.parent) == before
+
+
 def test_issuing_twice_gives_the_same_bytes(beam_file: Path) -> None:
     made = []
     for name in ("first", "second"):

@@ -27,6 +27,13 @@ class _Version(argparse.Action):
         parser.exit()
 
 
+def _path(text: str) -> Path:
+    """Return a path as typed; an empty one, of a variable that is not set, would be this folder."""
+    if not text.strip():
+        raise argparse.ArgumentTypeError(f"{text!r} is no path; write the name of a file or folder")
+    return Path(text)
+
+
 def parser() -> argparse.ArgumentParser:
     """Return the parser of all commands."""
     made = argparse.ArgumentParser(
@@ -57,9 +64,9 @@ def _add_issue(commands: _Commands[argparse.ArgumentParser]) -> None:
         "the package: PDF, HTML, record, and the drawings (DXF) and tables (CSV) of the calcs, all "
         "of them or none. Several notebooks of one project make one package.",
     )
-    issue.add_argument("notebooks", nargs="+", type=Path, metavar="CALC.ipynb")
+    issue.add_argument("notebooks", nargs="+", type=_path, metavar="CALC.ipynb")
     issue.add_argument(
-        "--into", type=Path, metavar="DIR", help="folder to print into (default: issued, beside"
+        "--into", type=_path, metavar="DIR", help="folder to print into (default: issued, beside"
         " the first notebook)",
     )  # fmt: skip
     issue.add_argument(
@@ -78,7 +85,7 @@ def _add_recheck(commands: _Commands[argparse.ArgumentParser]) -> None:
         description="Re-execute calc notebooks and compare every line with what is stored. "
         "Nothing is changed. Exit code 1 when a line differs or a check does not hold.",
     )
-    recheck.add_argument("notebooks", nargs="+", type=Path, metavar="CALC.ipynb")
+    recheck.add_argument("notebooks", nargs="+", type=_path, metavar="CALC.ipynb")
 
 
 def _add_compare(commands: _Commands[argparse.ArgumentParser]) -> None:
@@ -89,8 +96,8 @@ def _add_compare(commands: _Commands[argparse.ArgumentParser]) -> None:
         "to the next, with both values. Nothing in the files is run. Exit code 1 when a line "
         "differs.",
     )
-    made.add_argument("old", type=Path, metavar="OLD", help="notebook, PDF, HTML or record")
-    made.add_argument("new", type=Path, metavar="NEW", help="the later issue, of any such kind")
+    made.add_argument("old", type=_path, metavar="OLD", help="notebook, PDF, HTML or record")
+    made.add_argument("new", type=_path, metavar="NEW", help="the later issue, of any such kind")
     made.add_argument("--all", action="store_true", help="name every line that differs")
 
 
@@ -100,7 +107,7 @@ def _add_lines(commands: _Commands[argparse.ArgumentParser]) -> None:
         help="show the lines of a notebook, a printed PDF or HTML, or a record; runs nothing",
         description="Show every recorded line of a calc. Nothing in the file is run.",
     )
-    lines.add_argument("file", type=Path, metavar="FILE")
+    lines.add_argument("file", type=_path, metavar="FILE")
     lines.add_argument("--json", action="store_true", help="print JSON instead of a table")
 
 
@@ -115,27 +122,27 @@ def _add_audit(commands: _Commands[argparse.ArgumentParser]) -> None:
         "its code. Nothing in a file is run.",
     )
     audit.add_argument(
-        "record", type=Path, metavar="RECORD", help="notebook, PDF, HTML or record of the calc"
+        "record", type=_path, metavar="RECORD", help="notebook, PDF, HTML or record of the calc"
     )
     table = audit.add_mutually_exclusive_group()
-    table.add_argument("--claims", type=Path, metavar="FILE", help="filled table, .csv or .xlsx")
+    table.add_argument("--claims", type=_path, metavar="FILE", help="filled table, .csv or .xlsx")
     table.add_argument(
-        "--blank", type=Path, metavar="FILE", help="write a blank table of what governs, and stop"
+        "--blank", type=_path, metavar="FILE", help="write a blank table of what governs, and stop"
     )
     table.add_argument(
-        "--blank-full", type=Path, metavar="FILE", help="write a blank table of every line"
+        "--blank-full", type=_path, metavar="FILE", help="write a blank table of every line"
     )
     table.add_argument(
-        "--blank-drawing", type=Path, metavar="FILE", help="write a blank table of what is drawn"
+        "--blank-drawing", type=_path, metavar="FILE", help="write a blank table of what is drawn"
     )
     audit.add_argument(
-        "--drawing", type=Path, metavar="FILE", help="filled table of what is drawn, .csv or .xlsx"
+        "--drawing", type=_path, metavar="FILE", help="filled table of what is drawn, .csv or .xlsx"
     )
     audit.add_argument("--calc", metavar="ID", help="which calc of a package of several")
     audit.add_argument("--json", action="store_true", help="print JSON instead of text")
-    audit.add_argument("--into", type=Path, metavar="DIR", help="print the report into a folder")
+    audit.add_argument("--into", type=_path, metavar="DIR", help="print the report into a folder")
     audit.add_argument(
-        "--review", type=Path, metavar="FILE",
+        "--review", type=_path, metavar="FILE",
         help="raise the findings in a review record, each that does not stand there yet",
     )  # fmt: skip
     audit.add_argument("--checker", default="", metavar="NAME", help="who audits")
@@ -150,9 +157,9 @@ def _add_verify(commands: _Commands[argparse.ArgumentParser]) -> None:
         "printed, mark for mark. Exit code 1 when something has been altered or the record has "
         "been taken out, 2 when the file is no package.",
     )
-    verify.add_argument("file", type=Path, metavar="FILE")
+    verify.add_argument("file", type=_path, metavar="FILE")
     verify.add_argument(
-        "--against", type=Path, metavar="RECORD",
+        "--against", type=_path, metavar="RECORD",
         help="a record, a package or a notebook to compare with as well; a notebook proves the "
         "prose too",
     )  # fmt: skip
@@ -167,16 +174,16 @@ def _add_review(commands: _Commands[argparse.ArgumentParser]) -> None:
         "change and what has changed, findings, conflicts. Exit code 1 while anything stands open. "
         "Marks are made in the HTML package: open it in a browser and choose Review.",
     )
-    review.add_argument("calc", type=Path, metavar="CALC", help="notebook, PDF, HTML or record")
+    review.add_argument("calc", type=_path, metavar="CALC", help="notebook, PDF, HTML or record")
     review.add_argument(
-        "files", type=Path, nargs="*", metavar="FILE",
+        "files", type=_path, nargs="*", metavar="FILE",
         help="files of reviewers (default: the .review.json beside CALC, else what is printed in "
         "the package)",
     )  # fmt: skip
     review.add_argument(
-        "--marks", type=Path, nargs="+", default=[], metavar="FILE", help="the same",
+        "--marks", type=_path, nargs="+", default=[], metavar="FILE", help="the same",
     )  # fmt: skip
-    review.add_argument("--merge", type=Path, metavar="OUT", help="write all marks into one file")
+    review.add_argument("--merge", type=_path, metavar="OUT", help="write all marks into one file")
     review.add_argument("--sign", metavar="NAME", help="sign off, if nothing stands open")
     review.add_argument("--on", metavar="DATE", help="day of the sign-off (default: today)")
 
