@@ -77,7 +77,8 @@ def test_typed_values(typed: Any, unit: str, value: float, number: str) -> None:
         ("2 ft 2 in", "MPa", ("f_c: '2 ft 2 in' is a length, but a stress or pressure is needed; "
                               "write it in MPa, Pa, kPa, GPa, psi, ksi, psf, ksf")),
         ("2 m 2 mm", "m", ("f_c: '2 m 2 mm': 'm 2 mm' is not a unit of the list; "
-                           "write one number with one unit, such as '26 in'")),
+                           "write one number with one unit, such as '26 in', and a comma "
+                           "between two texts of a list")),
         ("2'-13\"", "mm", ("f_c: '2\\'-13\"' is not understood; write '25 ft 6 1/2 in': "
                           "inches below 12, in halves down to sixty-fourths")),
         ("1/3 in", "mm", ("f_c: '1/3 in' is not understood; write '25 ft 6 1/2 in': "

@@ -200,7 +200,7 @@ def _advice(spelling: str, wanted: Unit | None) -> str:
     if meant and (wanted is None or UNITS[meant].kind == wanted.kind):
         return repr(meant)
     if any(letter.isdigit() for letter in spelling[1:-1]) and " " in spelling:
-        return "one number with one unit, such as '26 in'"
+        return "one number with one unit, such as '26 in', and a comma between two texts of a list"
     if near:
         return " or ".join(map(repr, near))
     return f"it in {', '.join(usual_units(wanted))}" if wanted else _EXAMPLES

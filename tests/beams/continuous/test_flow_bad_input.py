@@ -373,6 +373,26 @@ def test_a_weight_that_is_given_is_the_one_that_loads_the_beam() -> None:
     assert beam.sheet.entry("loads/w_sl").value == pytest.approx(11.1104, rel=1e-12)
 
 
+def test_every_size_of_a_column_is_told_at_once() -> None:
+    matches(
+        refused_at_start(columns={2: ["450 x 450 kPa x 36 m"]}),
+        "columns, support 2, along the beam: '450' has no unit; write '450 mm'",
+        "columns, support 2, across it: '450 kPa' is a stress or pressure, but a length is needed; "
+        "write it in mm, cm, m, in, ft",
+        "columns, support 2, height: '36 m' is outside 0.5 to 20 m, the range of the method; write "
+        "a value inside it",
+    )
+
+
+def test_a_comma_left_out_between_two_spans_is_asked_for() -> None:
+    """Python joins two texts that stand beside each other: ["7.6 m", "9.2 m" "7.6 m"]."""
+    faults = refused_at_start(spans=["7.6 m", "9.2 m7.6 m"])
+    assert faults[0] == (
+        "spans, span 2: '9.2 m7.6 m': 'm7.6 m' is not a unit of the list; write one number with "
+        "one unit, such as '26 in', and a comma between two texts of a list"
+    )
+
+
 def test_columns_that_are_no_columns_or_wider_than_their_support() -> None:
     matches(
         refused_at_start(columns={2: 5}),

@@ -35,6 +35,7 @@ def checked(*zones: Any, basis: ShearBasis = BASIS) -> Choice:
         ),
         ({"span": 1}, "no spacing; write for example 'spacing': '200 mm'"),
         ({"span": 4, "spacing": "200 mm"}, "span '4' does not exist; write one of 1, 2, 3"),
+        ({"spacing": "200 mm"}, "zone 1: 'span' is missing; write for example 'span': 1"),
         ({"span": 1, "from": "0 mm", "to": "9 m", "spacing": "200 mm"}, "not inside the clear"),
         ({"span": 1, "from": "2 m", "to": "1 m", "spacing": "200 mm"}, "not inside the clear"),
         ({"span": 1, "at": "1 m", "spacing": "200 mm"}, "'at' is unknown; write span, from, to"),

@@ -81,14 +81,14 @@ def read_bytes(name: str, given: object) -> bytes:
             what = "a folder, no file" if path.is_dir() else "no such file"
             raise UserError(
                 f"{name}: {echo(str(given))}: {what}; write its path from the folder of the "
-                "notebook, like 'frame.csv'"
+                f"notebook, like {_like(name)}"
             )
         with path.open("rb") as stream:
             content = stream.read(MOST_BYTES + 1)
     except OSError as error:
         raise UserError(
             f"{name}: {echo(str(given))} cannot be read: {error.strerror}; write the path of a "
-            "file like 'frame.csv'"
+            f"file like {_like(name)}"
         ) from None
     if len(content) > MOST_BYTES:
         raise UserError(
@@ -98,11 +98,15 @@ def read_bytes(name: str, given: object) -> bytes:
     return content
 
 
+def _like(name: str) -> str:
+    return "'reactions.csv'" if name == "reactions_csv" else "'frame.csv'"
+
+
 def _path(name: str, given: object) -> Path:
     """Return a path as typed; raises :class:`UserError` where it is none."""
     text = str(given) if isinstance(given, str | Path) else ""
     if not 0 < len(text.strip()) <= _LONGEST_PATH or not text.isprintable():
-        raise UserError(f"{name}: {echo(given)} is no path of a file; write one like 'frame.csv'")
+        raise UserError(f"{name}: {echo(given)} is no path of a file; write one like {_like(name)}")
     return Path(text)
 
 

@@ -155,6 +155,9 @@ def _read_zone(
         if key not in _KEYS:
             faults.add(f"{name}: {echo(key)} is unknown; write {', '.join(_KEYS)}")
     span = row.get("span")
+    if span is None:
+        faults.add(f"{name}: 'span' is missing; write for example 'span': 1")
+        raise UserError(faults.faults)
     if not isinstance(span, int) or span not in clear:
         told = bare_number(span) or f"one of {_listed(clear)}"
         faults.add(f"{name}: span {echo(span)} does not exist; write {told}")

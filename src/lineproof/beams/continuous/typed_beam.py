@@ -188,16 +188,23 @@ def _read_columns(
     return made
 
 
+_COLUMN_SIDES = (
+    ("along the beam", COLUMN_SIZE), ("across it", COLUMN_SIZE), ("height", COLUMN_HEIGHT),
+)  # fmt: skip
+
+
 def _read_column(name: str, given: object) -> TypedColumn:
     match = _COLUMN.match(str(given))
     if match is None:
         raise UserError(f"{name}: {echo(given)} is not understood; write {_COLUMN_SAMPLE}")
-    return TypedColumn(
-        read_in_range(name, match[1], COLUMN_SIZE),
-        read_in_range(name, match[2], COLUMN_SIZE),
-        read_in_range(name, match[3], COLUMN_HEIGHT),
-        "pinned" if match[4] else "fixed",
-    )
+    faults = FaultList()
+    read = [
+        _try(faults, read_in_range, f"{name}, {which}", match[n], limits)
+        for n, (which, limits) in enumerate(_COLUMN_SIDES, start=1)
+    ]
+    faults.raise_if_any()
+    along, across, height = read
+    return TypedColumn(along, across, height, "pinned" if match[4] else "fixed")
 
 
 _KEYS = {"type", "span", "line", "area", "point", "width", "from", "to", "at", "what"}
