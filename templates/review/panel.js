@@ -4,7 +4,7 @@ class Panel {
   constructor(work, trace) {
     this.work = work;
     this.trace = trace;
-    document.body.append(document.getElementById("review-tools").content.cloneNode(true));
+    document.body.prepend(document.getElementById("review-tools").content.cloneNode(true));
     this.opener = document.querySelector(".rv-open");
     this.root = document.getElementById("rv");
     this.part = new Map([...this.root.querySelectorAll("[data-rv]")].map((e) => [e.dataset.rv, e]));
@@ -69,6 +69,7 @@ class Panel {
     this.part.get("own").hidden = !line;
     const found = line ? this.trace.around(line) : { args: new Map(), users: new Map() };
     this.part.get("line").textContent = line ? nameOf(line) : "No line chosen";
+    this.lit = { args: found.args.size, users: found.users.size };
     for (const way of ["args", "users"]) this.list(way, line, found[way]);
     if (line) this.marks(line);
   }

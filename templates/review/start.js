@@ -139,6 +139,9 @@ class Desk {
   deepen(way, depth) {
     this.trace.depth[way] = depth;
     this.panel.line();
+    const far = ["hidden", "next lines", way === "args" ? "to the givens" : "to the checks"][depth];
+    const lit = this.panel.lit[way];
+    this.panel.say(`${way === "args" ? "Rests on" : "Goes into"}: ${far}; ${many(lit, "line", "lines")} lit.`);
   }
 
   // Marks ------------------------------------------------------------------------------------
@@ -152,19 +155,20 @@ class Desk {
     return false;
   }
 
-  mark(state, note = this.work.ownMark(this.work.line, this.panel.about)?.note ?? "") {
+  mark(state, note = this.work.ownMark(this.work.line, this.panel.about)?.note ?? "", how = "") {
     const { work, panel } = this;
     const also = work.mark(panel.about, state, note);
     const words = wordsOf({ kind: panel.about, state });
     this.refresh();
-    panel.say(`${nameOf(work.line)}: ${words}${also ? `, with ${also} that repeat it` : ""}.`);
+    panel.say(`${nameOf(work.line)}: ${words}${how}${also ? `, with ${also} that repeat it` : ""}.`);
     if (panel.part.get("onward").checked && state !== "queried") this.step(1);
   }
 
   comment() {
     if (!this.may()) return;
     const own = this.work.ownMark(this.work.line, this.panel.about, true);
-    this.mark(own?.state ?? "seen", this.panel.part.get("note").value.trim());
+    const note = this.panel.part.get("note").value.trim();
+    this.mark(own?.state ?? "seen", note, note ? ", comment kept" : ", no comment");
   }
 
   takeBack() {
@@ -322,6 +326,7 @@ class Desk {
     else if (key === "d") cycle("users");
     else if (key === "c") this.write("note");
     else if (key === "f") this.write("finding");
+    else if (key === "t") this.panel.root.focus();
     else if (key === "o") { if (this.work.before) this.jump(this.work.before); }
     else if (/^[1-7]$/.test(key)) this.show(FILTERS[Number(key) - 1][0]);
     else return false;
@@ -349,7 +354,7 @@ class Desk {
 
 // The button stands on every page; records are read when it or a value is first clicked.
 const opener = document.getElementById("review-tools").content.querySelector(".rv-open").cloneNode(true);
-document.body.append(opener);
+document.body.prepend(opener); // first for who goes through the page by Tab, past thousands of links
 let desk = null;
 
 function begin() {

@@ -64,6 +64,20 @@ def test_the_whole_chain_is_lit_on_demand_each_way_apart(opened: Open) -> None:
     assert group.get_by_role("button", name="hide").get_attribute("aria-pressed") == "true"
 
 
+def test_how_far_the_light_goes_is_told_to_who_does_not_see_it(opened: Open) -> None:
+    """The lines lit as above: d and a, then h, A_s and b as well; no other line rests on it."""
+    page = opened()
+    row(page, "span-1/within").locator(".result").click()
+    told = []
+    for key in "uuud":
+        page.keyboard.press(key)
+        told.append(status(page))
+    assert told == [
+        "Rests on: to the givens; 5 lines lit.", "Rests on: hidden; 0 lines lit.",
+        "Rests on: next lines; 2 lines lit.", "Goes into: to the checks; 0 lines lit.",
+    ]  # fmt: skip
+
+
 def test_the_lines_around_are_listed_and_lead_on(opened: Open) -> None:
     page = opened()
     row(page, "span-1/within").locator(".result").click()
@@ -210,9 +224,9 @@ def test_keys_do_nothing_while_one_types_or_when_they_are_off(opened: Open) -> N
 def test_every_key_is_told_on_the_page(opened: Open) -> None:
     page = opened()
     page.get_by_text("Keys", exact=True).click()
-    told = page.locator(".rv-keys dt").all_inner_texts()
+    told = page.locator("#rv dl dt").all_inner_texts()
     assert told == [
-        "n, p", "m", "a, s, q", "x", "c", "f", "i", "u, d", "1 to 7", "o", "Esc",
+        "n, p", "m", "a, s, q", "x", "c", "f", "i", "u, d", "1 to 7", "o", "t", "Esc",
     ]  # fmt: skip
 
 
@@ -250,6 +264,7 @@ def test_a_comment_is_kept_with_the_mark(opened: Open) -> None:
     page.keyboard.press("c")
     page.keyboard.type("Why h over b?")
     page.get_by_role("button", name="Keep comment").click()
+    assert "seen, comment kept" in status(page)
     assert page.locator("[data-rv=marks] li").inner_text().endswith("seen: Why h over b?")
     page.keyboard.press("Escape")
     page.keyboard.press("q")

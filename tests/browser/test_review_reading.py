@@ -22,7 +22,7 @@ from .review_page import (
 )
 
 if TYPE_CHECKING:
-    from playwright.sync_api import Browser
+    from playwright.sync_api import Browser, BrowserContext
 
 
 def test_on_paper_nothing_of_the_tools_is_seen(opened: Open) -> None:
@@ -71,6 +71,28 @@ def test_the_tools_can_be_used_without_a_mouse(opened: Open) -> None:
     assert here(page) == "data/b"
     page.keyboard.press("a")
     assert margins(page) == {"data/b": "✓ accepted"}
+
+
+def test_the_tools_come_first_by_tab_and_by_a_key_from_any_line(
+    context: BrowserContext, tmp_path: Path
+) -> None:
+    """Behind the thousands of links of a long package nobody would reach them."""
+    path = tmp_path / "beam.html"
+    path.write_text(to_html(build_package([beam()])), encoding="utf-8")
+    page = context.new_page()
+    page.goto(path.as_uri())
+    page.keyboard.press("Tab")
+    assert page.evaluate("document.activeElement.textContent") == "Review"
+    page.keyboard.press("Enter")
+    page.keyboard.press("Escape")
+    page.keyboard.press("n")
+    assert page.evaluate("document.activeElement.id") == here(page) == "data/b"
+    page.keyboard.press("t")
+    assert page.evaluate("document.activeElement.getAttribute('aria-label')") == "Review tools"
+    page.keyboard.press("Tab")
+    assert page.evaluate("document.activeElement.textContent") == "Close"
+    page.keyboard.press("Escape")
+    assert page.evaluate("document.activeElement.id") == "data/b"
 
 
 @pytest.mark.parametrize("width", [1400, 1000, 400])

@@ -14,6 +14,7 @@ from urllib.parse import unquote
 import pytest
 
 from lineproof.package import build_package, records_in_html, to_html
+from lineproof.resources import folder
 
 Record = dict[str, Any]
 
@@ -34,6 +35,25 @@ def test_page_is_well_formed_and_the_same_every_time(page: str, whole_record: Re
     """Every element is closed; printing again gives the same text."""
     assert tree_of(page).tag == "html"
     assert page == to_html(build_package([json.loads(json.dumps(whole_record))]))
+
+
+def test_every_class_named_has_a_rule() -> None:
+    """In a style sheet, or in the scripts of the review; a class without one shows nothing."""
+    templates = folder("templates")
+    pages = [*templates.glob("**/*.html.j2")]
+    named = {
+        name
+        for path in pages
+        for words in re.findall(r'class="([^"{]+)["{]', path.read_text(encoding="utf-8"))
+        for name in words.split()
+    }
+    rules = "".join(
+        path.read_text(encoding="utf-8")
+        for path in [*templates.glob("**/*.css"), *templates.glob("review/*.js")]
+    )
+    assert len(pages) > 8
+    assert {"entry", "working", "rv-row", "failed"} <= named
+    assert [n for n in sorted(named) if not re.search(rf"\.{re.escape(n)}(?![\w-])", rules)] == []
 
 
 def test_page_loads_nothing(page: str) -> None:
