@@ -10,7 +10,8 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
-from lineproof.audit.claims.judge import SlipFinder, judge
+from lineproof.audit.claims.judge import judge
+from lineproof.audit.claims.sought import SlipFinder
 from lineproof.audit.data import Claim, Judged, Verdict, read_from
 from lineproof.audit.graph import Graph
 from lineproof.quantity.units import internal_factor

@@ -6,6 +6,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from random import Random
 
 from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.claims.judge import judge
@@ -16,16 +17,22 @@ from lineproof.quantity.units import internal_factor
 
 from .planting_beams import BEAMS, beam
 
+MIXED = 0
+"""For the digits: each line has three, four, or all that a calculator carries."""
+_OF_A_LINE = (3, 3, 4, 6)
 
-def worked(graph: Graph, digits: int) -> list[Claim]:
+
+def worked(graph: Graph, digits: int, seed: int = 0) -> list[Claim]:
     """Return the quick table of a calc of which every line is rounded and carried on so."""
+    draw = Random(seed)  # noqa: S311 - the same digits every time
     values, texts = dict(graph.stored), dict[str, str]()
     for node in graph:
         if not node.has_value:
             continue
         factor = internal_factor(node.unit)
         if node.is_computed:
-            number = significant(node.compute(graph.named(node, values)) / factor, digits)
+            shown = digits or draw.choice(_OF_A_LINE)
+            number = significant(node.compute(graph.named(node, values)) / factor, shown)
             texts[node.id] = f"{number:f}"
             values[node.id] = float(number) * factor
         else:
@@ -42,7 +49,7 @@ def _claim(graph: Graph, entry_id: str, text: str) -> Claim:
 def judged_by_hand(numbers: Iterable[int], digits: int) -> list[tuple[int, Judged]]:
     """Judge the honest tables of random beams; return each claim with the number of its beam."""
     graphs = ((number, beam(number)) for number in numbers)
-    said = ((number, judge(graph, worked(graph, digits))) for number, graph in graphs)
+    said = ((number, judge(graph, worked(graph, digits, number))) for number, graph in graphs)
     return [(number, each) for number, all_ in said for each in all_ if each.claim is not None]
 
 
@@ -52,7 +59,8 @@ def not_agreeing(said: Iterable[tuple[int, Judged]]) -> list[tuple[int, str, str
 
 
 if __name__ == "__main__":
-    for digits in (3, 4):
+    for digits in (3, 4, MIXED):
         said = judged_by_hand(range(0, BEAMS, 12), digits)
         wrong = not_agreeing(said)
-        print(f"{digits} digits: {len(said)} numbers, not agreeing {len(wrong)}", *wrong, sep="\n")  # noqa: T201
+        counts = f"{len(said)} numbers, not agreeing {len(wrong)}"
+        print(f"{digits or 'mixed'} digits: {counts}", *wrong, sep="\n")  # noqa: T201

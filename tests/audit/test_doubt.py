@@ -14,7 +14,7 @@ from tests.audit.hand import beam, judged, sheet_of, typed
 from tests.beams.continuous import flow
 
 from lineproof.audit.audit import audit_claims
-from lineproof.audit.claims.judge import SlipFinder
+from lineproof.audit.claims.sought import SlipFinder
 from lineproof.audit.data import Audit, Severity, Verdict
 from lineproof.audit.graph import Graph
 from lineproof.audit.report import report_record

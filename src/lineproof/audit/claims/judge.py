@@ -2,21 +2,22 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
-from lineproof.audit.claims.copies import stands_alone, without_circles, without_results
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
-from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay, as_rounded
+from lineproof.audit.claims.mixed_digits import MixedDigits
+from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Worker
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
 from lineproof.audit.claims.rewritten import used_as_written, worked_rightly
 from lineproof.audit.claims.safe_side import errs_safely
+from lineproof.audit.claims.sought import SlipFinder, Sought
 from lineproof.audit.claims.twins import twins_of
 from lineproof.audit.claims.worlds import (
     as_recorded,
@@ -27,15 +28,9 @@ from lineproof.audit.claims.worlds import (
 )
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.slips.rank import reproduced, without_underscore
-from lineproof.audit.slips.search import searching
+from lineproof.audit.slips.rank import reproduced
 from lineproof.record.entry import DECISION
 from lineproof.typeset.values import told
-
-SlipFinder = Callable[
-    [Graph, str, Mapping[str, Interval], Claim, Mapping[str, str]], tuple[Slip, ...]
-]
-"""Looks for the slip behind a claim: graph, line, values used, claim, and the table as typed."""
 
 WRONG = (Verdict.INPUT, Verdict.ORIGIN, Verdict.UNIT, Verdict.UNSAFE_ROUNDING, Verdict.UNKNOWN)
 """Verdicts whose values make those below carry something that is not right."""
@@ -81,9 +76,8 @@ class _Judge:
     """One run of judging; what has been judged so far decides what later claims carry."""
 
     def __init__(self, graph: Graph, claims: Sequence[Claim], find: SlipFinder | None) -> None:
-        self.graph, self.find = graph, find
+        self.graph = graph
         self.claims = {claim.id: claim for claim in claims}
-        self.typed = {claim.id: claim.typed for claim in claims}
         self.worker = Worker(graph)
         deviating = deviating_of(graph, claims)
         self.twins = twins_of(graph, deviating, self.claims)
@@ -96,16 +90,13 @@ class _Judge:
         self.unmoved = unmoved_lines(self.graph, self.claims, self.worlds)
         self.numbers = numbers_of(graph, claims, self.worlds)
         self.way = OnTheWay(self.worker, self.claims)
-        self.find_rounded = searching()
-        self.used = {i: form.interval for i, form in self.worlds.claimed.used.items()}
-        self.rounded = as_rounded(graph, self.used, self.claims)
+        self.mixed = MixedDigits(self.worker, self.claims)
+        self.sought = find and Sought(graph, self.claims, self.worlds, self.way, find)
         self.verdicts: dict[str, Verdict] = {}
         self.taints: dict[str, frozenset[str]] = {}
         self.turned: dict[str, list[str]] = {}
         self.as_written: dict[str, bool] = {}
         self.doubted: dict[str, bool] = {}
-        self.alone: dict[str, bool] = {}
-        self.order = {entry_id: at for at, entry_id in enumerate(graph.nodes)}
 
     def all(self) -> Iterator[Judged]:
         for node in self.graph:
@@ -177,12 +168,32 @@ class _Judge:
         found = next(filter(None, met), None)
         if found is None:
             return None
-        note = f"{FOLLOWS} {found[1]} digits"
+        bands = [each and each[0] for each in met]
+        return self._following(node, made, bands, f"{FOLLOWS} {found[1]} digits")
+
+    def _rounded_apart(self, node: Node, claim: Claim, made: Judged) -> Judged | None:
+        """Judge a line that rounding of each line above in its own way gives: asked beside a slip.
+
+        Nothing where all that it rests on is claimed.
+        """
+        if not self.way.is_open(node):
+            return None
+        met = [self.mixed.met(bench.world, node, claim.stands_for) for bench in self.benches]
+        if not any(met):
+            return None
+        read = self._following(node, made, met, f"{FOLLOWS} three digits or more")
+        return read if read.verdict in WRONG else self._beside_a_slip(node, claim, read)
+
+    def _following(
+        self, node: Node, made: Judged, met: Sequence[Interval | None], note: str
+    ) -> Judged:
+        """Judge a line that follows by a way of rounding, from values as claimed or put right."""
+        follows = next(filter(None, met))
         if met[0] is None:
             return replace(made, note=f"{note}, from the right values and not from those claimed")
         if met[-1] is None:
-            return self._carried(node, replace(made, follows=found[0]))
-        return replace(made, follows=found[0], note=note)
+            return self._carried(node, replace(made, follows=follows))
+        return replace(made, follows=follows, note=note)
 
     def _right_alone(self, node: Node, claim: Claim, made: Judged) -> Judged:
         """Judge a line that is right, or follows from right values, but not from those claimed."""
@@ -251,6 +262,8 @@ class _Judge:
             read = replace(made, verdict=Verdict.OTHER_METHOD, note=way.sentence)
             return self._beside_a_slip(node, claim, read, way)
         rounded = self._as_rounded(node, claim, around, made)
+        if rounded is None or rounded.verdict is Verdict.UNSAFE_ROUNDING:
+            rounded = self._rounded_apart(node, claim, made) or rounded
         if rounded is not None:
             return rounded
         turned = self.turned.get(node.part)
@@ -330,34 +343,7 @@ class _Judge:
         return replace(made, verdict=verdict, note=f"{note}: {_SIDES[safe]}")
 
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
-        if self.find is None:
-            return ()
-        below, stored = set(self.graph.below([node.id])), self.graph.stored
-        found = self.find(self.graph, node.id, self.used, claim, self.typed)
-        known = any(cause.usual for slip in found[:1] for cause in slip.causes)
-        if not known and self.way.is_open(node):
-            # What was worked from lines that nobody shows has the digits of these as well.
-            again = self.find_rounded(self.graph, node.id, self.rounded, claim, self.typed)
-            usual = (s for s in again if any(c.usual and not c.above for c in s.causes))
-            found = (*usual, *found) or again
-        slips = without_results(
-            found,
-            claim,
-            lambda i: i in below and not self.used[i].holds(stored[i]),
-        )
-        later = self.order[node.id].__lt__
-        told = without_circles(slips, claim, self._is_alone, lambda i: later(self.order[i]))
-        return tuple(map(without_underscore, told))
-
-    def _is_alone(self, entry_id: str) -> bool:
-        """Tell whether a claimed line follows from nothing, nor is a rounding of it."""
-        if entry_id not in self.alone:
-            claim = self.claims.get(entry_id)
-            if claim is None or not (node := self.graph[entry_id]).is_computed:
-                self.alone[entry_id] = False
-            else:
-                self.alone[entry_id] = stands_alone(claim, node.symbol, self.worlds.around(node))
-        return self.alone[entry_id]
+        return self.sought.slips(node, claim) if self.sought is not None else ()
 
     # -- what later lines carry ------------------------------------------------------------
 

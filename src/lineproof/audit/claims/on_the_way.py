@@ -2,7 +2,8 @@
 
 Who works by hand writes 22.6 kN/m for 22.56 and goes on with it. Where the table asks for the
 reaction alone, 94.9 kN for 94.8 is no slip. Each way of rounding gives one value, not a band, so
-that no more than such a value is let pass.
+that no more than such a value is let pass. Who rounds one line to three digits and the next to four
+has many more values: :mod:`lineproof.audit.claims.mixed_digits`.
 """
 
 from __future__ import annotations
