@@ -16,7 +16,7 @@ CALCS = folder("calcs")
 SLIPS = {
     "hog-2-left/M_f": "support axis",  # 361 at the axis for 311 at the face
     "sag-1/a": "b_w",  # 0.85 1500 400/(0.802 0.65 32 380) = 80.5 with the web for the flange
-    "sag-2/w_f": "w_s",  # 20.37 + 14.88 = 35.3 under specified for factored loads
+    "sag-2/w_f": "specified loads for factored ones",  # 20.37 + 14.88 = 35.3
     "deflection-2-sections/f_rd": "0.5",  # 0.6 sqrt(32) = 3.39, not halved
     "shear-1-right/V_s": "half of the legs",  # 143/2 = 71.6 with one leg for two
     "anchorage-bar-4/l_d": "",  # 645/1.3 = 496 without the factor of top bars

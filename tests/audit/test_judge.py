@@ -9,7 +9,7 @@ from typing import Any
 import pytest
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
-from tests.audit.hand import GIVENS, LINES, beam, judged, sheet_of, typed
+from tests.audit.hand import GIVENS, LINES, beam, judged, sheet_of, typed, verdicts_of
 from tests.beams.continuous import flow
 from tests.beams.gallery import EDGE, RECTANGULAR, record_of
 
@@ -50,13 +50,33 @@ def test_rounded_values_agree(record: Record) -> None:
 def test_worked_from_rounded_values_agrees(record: Record) -> None:
     """With d = 540 (two digits, typed 5.4e2): M_r = 408 000 x (540 - 32.4893) = 207.1; right 206.6.
 
-    d "54 cm" stands for 535 to 545, so M_r may be 205.0 to 209.1; "207.1" follows from it.
+    d "54 cm" was carried on as 540 or as the 538.95 that it rounds, or between, and half a
+    hundredth more for roundings on the way: 1.05 + 2.70 = 3.75, so M_r may be 205.5 to 208.6.
     """
     said = judged(record, {"beam/d": "54 cm", "strength/M_r": "207.1"})
     assert [each.verdict for each in said.values()] == [Verdict.AGREES, Verdict.AGREES]
     follows = said["strength/M_r"].follows
-    assert follows.low == pytest.approx(408_000 * (535 - 32.48925), rel=1e-4)
-    assert follows.high == pytest.approx(408_000 * (545 - 32.48925), rel=1e-4)
+    assert follows.low == pytest.approx(408_000 * (536.25 - 32.48925), rel=1e-4)
+    assert follows.high == pytest.approx(408_000 * (543.75 - 32.48925), rel=1e-4)
+
+
+def test_an_exact_number_written_short_opens_nothing() -> None:
+    """b = s = 3 m, "3": 2.4 x 3 = 7.2; "6.76" is 2.4 x 2.82, and no 2.5 to 3.5 m make it right."""
+    lines: dict[str, str] = {"b = s": "m", "w = q*b": "kN/m"}
+    givens = {"s": "3 m", "q": "2.4 kPa"}
+    said = verdicts_of(lines, givens, {"b": "3", "w": "6.76"})
+    assert said == {"b": Verdict.AGREES, "w": Verdict.ORIGIN}
+    assert verdicts_of(lines, givens, {"b": "3", "w": "7.2"})["w"] is Verdict.AGREES
+
+
+def test_a_number_of_one_digit_opens_no_more_than_its_rounding() -> None:
+    """w = 2.4 x 3.2 = 7.68, "8": w l/2 over 8.4 m is 33.6, 32.26 of 7.68, and "31.8" of neither."""
+    lines = {"w = q*s": "kN/m", "V = w*l/2": "kN"}
+    givens = {"s": "3.2 m", "q": "2.4 kPa", "l": "8.4 m"}
+    for text in ("33.6", "32.3", "33"):
+        assert verdicts_of(lines, givens, {"w": "8", "V": text})["V"] is Verdict.AGREES, text
+    for text in ("31.8", "35.2"):  # 7.57 and 8.38 would round to 8 as well
+        assert verdicts_of(lines, givens, {"w": "8", "V": text})["V"] is Verdict.ORIGIN, text
 
 
 def test_nothing_claimed_is_no_slip_of_units(record: Record) -> None:

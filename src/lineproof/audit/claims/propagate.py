@@ -23,6 +23,8 @@ from lineproof.record.procedures import recall, run
 
 Function = Callable[..., float]
 """What working a formula raises; TypeError: a root of a negative number compared."""
+_COARSE = 0.005
+"""Half the last digit over the number, from which on it has fewer than three digits."""
 _SAME = 1e-12
 """Relative difference that is nothing but the rounding of floats."""
 
@@ -59,6 +61,30 @@ def claimed_form(entry_id: str, interval: Interval) -> Form:
     """Return the form of a claimed number: its own interval, whatever it was worked from."""
     half = interval.half
     return Form(interval.middle, {entry_id: half} if half else {})
+
+
+def carried_on(stands: Form, follows: Form) -> Form:
+    """Return what is worked with below a claimed line, from what it stands for and what follows.
+
+    The number as typed was carried on, or the one that it rounds. The "3" that follows from 1 + 2
+    is 3 and not 2.5 to 3.5; the "3" of 2.96 lets no more pass than what lies between both, with
+    the roundings on the way. With three digits and more it stands for what it stands for.
+
+    >>> carried_on(Form(3.0, {"x": 0.5}), Form(3.0)).half
+    0.0
+    >>> round(carried_on(Form(3.0, {"x": 0.5}), Form(2.96)).half, 4)
+    0.055
+    """
+    half, size = stands.half, abs(stands.middle)
+    if len(stands.parts) != 1 or stands.rest or half <= 0:
+        return stands
+    off = abs(stands.middle - follows.middle)
+    if follows.is_point and off <= _SAME * size:
+        return follows
+    if half <= _COARSE * size or off > half + follows.half:
+        return stands
+    (own,) = stands.parts
+    return Form(stands.middle, {own: min(half, off + follows.half + _COARSE * size)})
 
 
 def combined(function: Function, forms: Sequence[Form]) -> Form:
@@ -143,11 +169,13 @@ def _with_corners(
 class World:
     """A record worked from certain values.
 
-    ``used`` is the form that each line lends to the lines below, a claimed one as it was claimed;
+    ``stands`` are the forms that were put in place of lines' own, and ``used`` the form that each
+    line lends to the lines below: a claimed one as it was claimed, :func:`carried_on`;
     ``follows`` is what a computed line is by its own formula; ``failed`` says why a line could not
     be worked; ``turned`` are the decisions that go the other way.
     """
 
+    stands: Mapping[str, Form]
     used: Mapping[str, Form]
     follows: Mapping[str, Form]
     failed: Mapping[str, str]
@@ -186,16 +214,18 @@ class Worker:
             if node.is_computed:
                 failed.pop(node.id, None)
                 follows[node.id] = self._worked(node, used, needed, failed)
-                used[node.id] = stands.get(node.id, follows[node.id])
+                stood = stands.get(node.id)
+                made = follows[node.id]
+                used[node.id] = made if stood is None else carried_on(stood, made)
             else:
                 used[node.id] = stands.get(node.id) or Form(self.graph.stored[node.id])
-        return World(used, follows, failed, frozenset(turned))
+        return World(dict(stands), used, follows, failed, frozenset(turned))
 
     def _again(self, stands: Mapping[str, Form], base: World | None) -> Iterator[Node]:
         if base is None:
             yield from self.graph
             return
-        other = [i for i, form in stands.items() if base.used.get(i) != form]
+        other = [i for i, form in stands.items() if base.stands.get(i) != form]
         below = set(self.graph.below(other)) | set(other)
         yield from (node for node in self.graph if node.id in below)
 
