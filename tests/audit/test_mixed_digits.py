@@ -100,3 +100,22 @@ def test_honest_tables_rounded_line_by_line_hold_no_error() -> None:
     said = judged_by_hand(range(0, BEAMS, 15), MIXED)
     assert len(said) > 800  # more than forty a beam: no empty count
     assert [each for each in not_agreeing(said) if each[2] == str(Verdict.ORIGIN)] == []
+
+
+def test_a_line_that_rounding_moves_back_was_not_left_unchanged() -> None:
+    """gamma 24: (6.4872 + 3.564) x 4.2 = 42.215; 23.9: 10.0242 x 4.2 = 42.10, 0.05 x 4.2 about it.
+
+    With 20 it is 8.97 x 4.2 = 37.7, which no rounding brings to 42.2.
+    """
+    lines = {"w_sl = gamma*A": "kN/m", "w = w_sl + w_c": "kN/m", "V = w*l/2": "kN"}
+    givens = {"gamma": "24 kN/m3", "A": "0.2703 m2", "w_c": "3.564 kN/m", "l": "8.4 m"}
+    record = sheet_of(lines, givens).close()
+
+    def said(gamma: str) -> Judged:
+        found = judged(record, {"given/gamma": gamma, "beam/V": "42.2"}, find_slips)
+        return found["beam/V"]
+
+    assert said("23.9").verdict is Verdict.CARRIED
+    assert said("23.9").causes == ("given/gamma",)
+    assert said("20").verdict is Verdict.ORIGIN
+    assert "not changed with gamma" in said("20").note

@@ -198,11 +198,22 @@ class _Judge:
     def _right_alone(self, node: Node, claim: Claim, made: Judged) -> Judged:
         """Judge a line that is right, or follows from right values, but not from those claimed."""
         if node.id in self.unmoved:
-            return self._not_changed_with(node, claim, made)
+            moved = self._moved_by_hand(node, claim, made)
+            return moved or self._not_changed_with(node, claim, made)
         note = "right, though it does not follow from the values claimed"
         if not claim.stands_for.holds(made.right):
             note = "follows from the right values, not from all those claimed"
         return replace(made, note=note)
+
+    def _moved_by_hand(self, node: Node, claim: Claim, made: Judged) -> Judged | None:
+        """Judge a line that has the right value, and by rounding above that of the inputs claimed.
+
+        The one does not show that it was left as it was.
+        """
+        world, stands = self.claimed_bench.world, claim.stands_for
+        met = self.way.met(world, node, stands)
+        band = met[0] if met else self.way.is_open(node) and self.mixed.met(world, node, stands)
+        return self._carried(node, replace(made, follows=band)) if band else None
 
     def _not_changed_with(self, node: Node, claim: Claim, made: Judged) -> Judged:
         """Judge a line that kept the value of the recorded input while its input was changed."""
