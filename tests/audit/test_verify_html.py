@@ -99,6 +99,85 @@ def test_what_shows_something_else_than_the_record_is_found(old: str, new: str) 
     assert checked(page).outcome is Outcome.ALTERED
 
 
+LINE = 'id="given/l"'
+OVER = "position: absolute; top: 9em; background: white"
+
+
+@pytest.mark.parametrize(
+    ("old", "new"),
+    [
+        ("<body>", '<body style="display: none">'),
+        ("<body>", '<body onload="document.body.textContent = 9">'),
+        ("<html ", "<html hidden "),
+        ("</head>", '<meta http-equiv="refresh" content="0; url=http://example.org/" /></head>'),
+        ("</head>", '<meta charset="utf-8" http-equiv="refresh" content="0; url=x" /></head>'),
+        ('<meta charset="utf-8" />', '<meta charset="iso-2022-jp" />'),
+        ('<meta http-equiv="Content-Security-Policy"', '<meta name="x"'),
+        (LINE, f'{LINE} style="display: none" style=""'),
+        (LINE, f"{LINE} popover"),
+        (f"{LINE}>", f'{LINE}><template shadowrootmode="open"><b>M_r = 999</b></template>'),
+        ("<body>", f'<body><div id="rv" style="{OVER}">M_r = 999 kN.m</div>'),
+        ("<body>", '<body><div id="rv"><style>.result { visibility: hidden }</style></div>'),
+        ("<body>", '<body><p id="rv"><img src="data:image/png;base64,AA" /></p>'),
+        ("</main>", "<!--><p>M_r = 999</p>--></main>"),
+        ("</main>", "<!-- a --!><p>M_r = 999</p> --></main>"),
+        ("</main>", "<![CDATA[><p>M_r = 999</p>]]></main>"),
+        (f'class="entry value" {LINE}', f'class="entry value rv-file" {LINE}'),
+        ("<td>B1</td>", "<td></td>"),
+    ],
+    ids=[
+        "page hidden by style", "page changed by a script", "page hidden", "led elsewhere",
+        "led elsewhere beside utf-8", "other coding", "scripts let in", "the first of two styles",
+        "pop-over", "shadow", "overlay as a tool", "style in a tool", "picture in a tool",
+        "empty comment", "comment ended early", "marked section", "class of a tool", "cell emptied",
+    ],
+)  # fmt: skip
+def test_what_a_browser_shows_and_a_simpler_reader_does_not_is_found(old: str, new: str) -> None:
+    assert old in by.html()
+    assert checked(by.html().replace(old, new, 1)).outcome is Outcome.ALTERED
+
+
+def test_a_line_wrapped_in_a_title_which_no_browser_shows_is_found() -> None:
+    page, start = by.html(), by.html().index(f'<div class="entry value" {LINE}')
+    end = page.index('<div class="entry', start + 1)
+    hidden = f"{page[:start]}<title>{page[start:end]}</title>{page[end:]}"
+
+    assert checked(hidden).outcome is Outcome.ALTERED
+
+
+def test_a_text_moved_to_another_place_among_the_same_tags_is_found() -> None:
+    """10^6 as "10 6", and a number under the heading of another column: texts and tags are kept."""
+    page = by.html()
+    power = page.replace("<mn>10</mn><mn>6</mn>", "<mn>10 6</mn><mn></mn>", 1)
+    cells = page.replace("<td>B1</td><td>4-20M</td>", "<td></td><td>B1 4-20M</td>", 1)
+
+    assert page not in (power, cells)
+    assert checked(power).outcome is checked(cells).outcome is Outcome.ALTERED
+
+
+@pytest.mark.parametrize("attribute", [f'style="{OVER}"', 'class="result"', 'id="given/b"'])
+def test_prose_that_lies_over_the_working_or_looks_like_it_is_found(attribute: str) -> None:
+    page = by.html(prose=True).replace(
+        '<div class="prose">', f'<div class="prose"><p {attribute}>9</p>', 1
+    )
+    assert checked(page).outcome is Outcome.ALTERED
+    plain = by.html(prose=True).replace('<div class="prose">', '<div class="prose"><p>9</p>', 1)
+    assert checked(plain).outcome is Outcome.INTACT  # told as text that the record does not prove
+
+
+def test_a_page_saved_with_the_tools_open_or_lines_hidden_says_so() -> None:
+    """A browser saves what the review tools have added to the page, filters too."""
+    added = '<aside id="rv" class="rv"><p>1 of 9 lines seen</p></aside></body>'
+    saved = by.html().replace("</body>", added).replace("<html ", '<html class="rv-on rv-some" ', 1)
+    saved = saved.replace(
+        'class="entry value" id="given/l"', 'class="entry value rv-here" id="given/l"'
+    )
+    found = checked(saved)
+
+    assert found.outcome is Outcome.HANDLED
+    assert [said.partition(" ")[0] for said in found.remarks] == ["the", "saved"]
+
+
 def test_rows_in_another_order_are_found() -> None:
     page = by.html()
     first, second, third = (

@@ -8,11 +8,10 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass, field
-from html.parser import HTMLParser
 
 from lineproof.audit.review.read import read_review
 from lineproof.audit.verify.data import Alteration, Outcome, Outside, Proof, Verification, Where
+from lineproof.audit.verify.html_page import Page, read_page
 from lineproof.audit.verify.record import (
     NOT_PRINTED,
     Source,
@@ -23,158 +22,12 @@ from lineproof.audit.verify.record import (
 )
 from lineproof.errors import UserError
 from lineproof.package import build_package, records_in_html, to_html
-from lineproof.package.reviewed import REVIEW_MIME
 from lineproof.record import MIME, Record
 
-_VOID = frozenset({"br", "hr", "img", "input", "link", "meta", "area", "base", "col", "embed",
-                   "source", "track", "wbr"})  # fmt: skip
 _RECORD = re.compile(rf'<script\s[^<>]*type="{re.escape(MIME)}"', re.IGNORECASE)
 _DIGEST = re.compile(r"Record ([0-9a-f]{16}(?: [0-9a-f]{16})*)\Z")
 _BEGUN = re.compile(r"\s*<!doctype html", re.IGNORECASE)
-_PLAIN = frozenset({"html", "head", "body", "meta", "title"})
-_ADDRESSES = frozenset({"href", "src", "xlink:href"})
 _AROUND = 24
-_PROSE = "prose"
-_TOOL = "rv-"
-_BESIDE = ("data-mark", "data-trace")
-_UNSEEN = frozenset({"tabindex", "xmlns"})
-
-
-@dataclass
-class Block:
-    """What stands under one anchor: its texts, and its tags with all that styles or draws them."""
-
-    anchor: str
-    texts: list[str] = field(default_factory=list)
-    drawn: list[str] = field(default_factory=list)
-
-    @property
-    def text(self) -> str:
-        """The texts, one space between them."""
-        return " ".join(self.texts)
-
-
-@dataclass
-class Page:
-    """A page read: its blocks by anchor in order, prose, styles, scripts, texts of reviews.
-
-    ``beside`` are the words that the review tools show beside lines.
-    """
-
-    blocks: dict[str, Block] = field(default_factory=dict)
-    prose: list[Block] = field(default_factory=list)
-    styles: list[str] = field(default_factory=list)
-    scripts: list[str] = field(default_factory=list)
-    reviews: list[str] = field(default_factory=list)
-    beside: list[str] = field(default_factory=list)
-
-
-def read_page(text: str, *, with_prose: bool = False) -> Page:
-    """Read a page; ``with_prose`` takes prose for a part of the page like any other."""
-    reader = _Reader(with_prose=with_prose)
-    reader.feed(text)
-    reader.close()
-    return reader.page
-
-
-class _Reader(HTMLParser):
-    """Reads a page into blocks; an element belongs to the nearest anchor above it."""
-
-    def __init__(self, *, with_prose: bool) -> None:
-        super().__init__(convert_charrefs=True)
-        self.page = Page()
-        self.with_prose = with_prose
-        self.open: list[tuple[str, Block]] = []
-        self.raw: list[str] | None = None
-        self.passed = 0
-
-    def handle_starttag(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
-        """Note an element under its anchor."""
-        named = {name: value or "" for name, value in attrs}
-        if self.passed or self._is_tool(tag, named):
-            self.passed += tag not in _VOID
-        elif tag in ("style", "script"):
-            self._raw(tag, named)
-        else:
-            block = self._block(named)
-            self.page.beside += [named.pop(name) for name in _BESIDE if name in named]
-            if tag not in _PLAIN:
-                block.drawn.append(_drawn(tag, named))
-            if tag not in _VOID:
-                self.open.append((tag, block))
-
-    def handle_startendtag(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
-        """Note an element without content."""
-        self.handle_starttag(tag, attrs)
-        if tag not in _VOID:
-            self.handle_endtag(tag)
-
-    def handle_endtag(self, tag: str) -> None:
-        """Close an element, and what was left open inside it."""
-        self.raw = None
-        if self.passed:
-            self.passed -= tag not in _VOID
-        elif any(tag == opened for opened, _ in self.open):
-            while self.open.pop()[0] != tag:
-                pass
-
-    def handle_data(self, data: str) -> None:
-        """Note a text."""
-        if self.passed:
-            return
-        if self.raw is not None:
-            self.raw[-1] += data
-            return
-        text = " ".join(data.split())
-        if text:
-            self._current().texts.append(text)
-
-    def _is_tool(self, tag: str, named: dict[str, str]) -> bool:
-        """Tell whether this is a tool of the review page, which stands apart from the print."""
-        top = all(opened in ("html", "body") for opened, _ in self.open)
-        tool = named.get("id") == "rv" or named.get("class") == "rv-open"
-        return tag == "template" or (top and tool)
-
-    def _raw(self, tag: str, named: dict[str, str]) -> None:
-        kind = named.get("type", "")
-        if tag == "style":
-            self.raw = self.page.styles
-        elif kind == REVIEW_MIME:
-            self.raw = self.page.reviews
-        else:
-            self.raw = [] if kind == MIME else self.page.scripts
-        self.raw.append(named.get("src", ""))
-
-    def _current(self) -> Block:
-        return self.open[-1][1] if self.open else self._anchored("")
-
-    def _anchored(self, anchor: str) -> Block:
-        return self.page.blocks.setdefault(anchor, Block(anchor))
-
-    def _block(self, named: dict[str, str]) -> Block:
-        current = self._current()
-        if any(current is prose for prose in self.page.prose):
-            return current
-        if not self.with_prose and named.get("class") == _PROSE:
-            self.page.prose.append(Block(next(reversed(self.page.blocks), "")))
-            return self.page.prose[-1]
-        anchor = named.get("id") or named.get("aria-labelledby")
-        return current if anchor is None else self._anchored(anchor)
-
-
-def _drawn(tag: str, named: dict[str, str]) -> str:
-    """Return a tag with its attributes; of an address within the page only its end."""
-    classes = named.get("class", "").split()
-    shown = {
-        **named,
-        "class": " ".join(name for name in classes if not name.startswith(_TOOL)),
-    }
-    kept = sorted(
-        (name, value.rpartition("#")[2] if name in _ADDRESSES and "#" in value else value)
-        for name, value in shown.items()
-        if (value and name not in _UNSEEN) or name == "hidden"
-    )
-    return f"{tag} {kept}"
 
 
 def verify_html(text: str, name: str, against: Sequence[Source] = ()) -> Verification:
@@ -202,7 +55,8 @@ def verify_html(text: str, name: str, against: Sequence[Source] = ()) -> Verific
     if not records:
         outcome = Outcome.STRIPPED
     else:
-        outcome = Outcome.ALTERED if alterations else Outcome.INTACT
+        outcome = Outcome.HANDLED if given.remarks else Outcome.INTACT
+        outcome = Outcome.ALTERED if alterations else outcome
     return Verification(
         file=name,
         outcome=outcome,
@@ -211,6 +65,7 @@ def verify_html(text: str, name: str, against: Sequence[Source] = ()) -> Verific
         ),
         alterations=tuple(alterations),
         outside=tuple(compared.outside),
+        remarks=tuple(given.remarks),
     )
 
 
