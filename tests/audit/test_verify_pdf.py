@@ -15,6 +15,7 @@ from hypothesis import strategies as st
 from pypdf.annotations import FreeText
 from pypdf.generic import (
     ArrayObject,
+    DecodedStreamObject,
     DictionaryObject,
     FloatObject,
     NameObject,
@@ -281,6 +282,35 @@ def test_a_font_that_draws_another_digit_is_found() -> None:
     assert Where.DRAWN in {altered.where for altered in found.alterations}
 
 
+def each_font(made: Any) -> list[Any]:
+    """Return the fonts of the page of the working."""
+    fonts = made.pages[WORKING]["/Resources"]["/Font"]
+    return [fonts[name].get_object() for name in fonts]
+
+
+def test_codes_led_to_other_glyphs_are_found() -> None:
+    """Fonts and text layer are as before: a map between code and glyph moves all by one."""
+    made = by.writer(by.pdf())
+    moved = b"begincmap 1 begincidrange <0000> <FFFE> 1 endcidrange endcmap"
+    for font in each_font(made):
+        stream = DecodedStreamObject()
+        stream.set_data(moved)
+        font[NameObject("/Encoding")] = made._add_object(stream)
+
+    assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
+
+
+@pytest.mark.parametrize("widths", [[0, [-500] * 200], [0, 300, 0]], ids=["list", "range"])
+def test_glyphs_that_move_another_way_are_found(widths: list[Any]) -> None:
+    """Moved backwards, 12 reads 21; not moved on, digits lie upon each other."""
+    made = by.writer(by.pdf())
+    for font in each_font(made):
+        given = [numbers(*each) if isinstance(each, list) else FloatObject(each) for each in widths]
+        font["/DescendantFonts"][0].get_object()[NameObject("/W")] = ArrayObject(given)
+
+    assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
+
+
 def test_a_page_taken_out_is_found() -> None:
     made = by.writer(by.pdf())
     made.remove_page(WORKING)
@@ -369,6 +399,66 @@ def signed(content: bytes) -> bytes:
     form = DictionaryObject({NameObject("/Fields"): ArrayObject([made._add_object(entry)])})
     made.root_object[NameObject("/AcroForm")] = made._add_object(form)
     return by.written(made)
+
+
+def test_a_link_with_a_border_is_laid_over_the_page() -> None:
+    """A white border 200 pt wide hides what it lies on; our own links have none."""
+    made = by.writer(by.pdf())
+    link = DictionaryObject(
+        {
+            NameObject("/Subtype"): NameObject("/Link"),
+            NameObject("/Rect"): numbers(60, 60, 560, 700),
+            NameObject("/Border"): numbers(0, 0, 200),
+            NameObject("/C"): numbers(1, 1, 1),
+        }
+    )
+    made.pages[WORKING][NameObject("/Annots")] = ArrayObject([made._add_object(link)])
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert found.outcome is Outcome.HANDLED
+    (told,) = (remark for remark in found.remarks if "Link" in remark)
+    assert told.startswith(f"page {WORKING + 1}: laid over by others: Link, over line ")
+
+
+def _attached(made: Any) -> None:
+    made.add_attachment("values.txt", b"M_r = 999 kN.m")
+
+
+def _script(made: Any) -> None:
+    action = {"/S": NameObject("/JavaScript"), "/JS": TextStringObject("app.alert(9)")}
+    made.root_object[NameObject("/OpenAction")] = DictionaryObject(
+        {NameObject(key): value for key, value in action.items()}
+    )
+
+
+def _form(made: Any) -> None:
+    form = {NameObject("/Fields"): ArrayObject(), NameObject("/XFA"): ArrayObject()}
+    made.root_object[NameObject("/AcroForm")] = DictionaryObject(form)
+
+
+def _portfolio(made: Any) -> None:
+    made.root_object[NameObject("/Collection")] = DictionaryObject()
+
+
+@pytest.mark.parametrize(
+    ("add", "told"),
+    [
+        (_attached, "attached by others: values.txt"),
+        (_script, "holds a script or an action that runs when the file or a page is opened"),
+        (_form, "holds a form (XFA) that some readers show in place of the pages"),
+        (_portfolio, "is made a portfolio"),
+    ],
+    ids=["attached", "script", "form", "portfolio"],
+)
+def test_what_others_put_beside_the_pages_is_told(add: Callable[[Any], None], told: str) -> None:
+    made = by.writer(by.pdf())
+    add(made)
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert found.outcome is Outcome.HANDLED
+    assert [remark for remark in found.remarks if remark.startswith(told)]
 
 
 def test_a_signature_appended_seals_the_package_and_leaves_it_intact() -> None:

@@ -20,6 +20,8 @@ _TABLE = re.compile(rb"\s*(?:xref|\d+ \d+ obj)")
 _HEAD, _TAIL = 1024, 4096
 _LETTER, _A4 = (612.0, 792.0), (595.28, 841.89)
 _LINK = "/Link"
+_OF_BORDER = 2
+"""Place of the width in a border: behind the radii of its corners."""
 _FIRST_PAGES = 3
 Box = tuple[float, float, float, float]
 """Left, low, right and high edge [pt]."""
@@ -34,6 +36,20 @@ def _rectangle(given: Any) -> Box:
     except (AttributeError, TypeError, ValueError):
         return (0.0, 0.0, 0.0, 0.0)
     return min(a, c), min(b, d), max(a, c), max(b, d)
+
+
+def _has_border(link: Any) -> bool:
+    """Tell whether a link is drawn: a thick border hides what it lies on. Ours have none."""
+    if "/BS" in link:
+        return float(link["/BS"].get_object().get("/W", 1)) > 0
+    border = link.get("/Border", [0, 0, 1]).get_object() if "/Border" in link else [0, 0, 1]
+    return len(border) > _OF_BORDER and float(border[_OF_BORDER]) > 0
+
+
+def _runs(action: Any) -> bool:
+    """Tell whether opening a file does more than to go to a page."""
+    done = action.get_object() if action is not None else []  # a place to go to is a list
+    return not isinstance(done, list) and done.get("/S") != "/GoTo"
 
 
 def is_pdf(content: bytes) -> bool:
@@ -113,7 +129,27 @@ class File:
         producer = str(metadata.get("/Producer", "")) if metadata else ""
         if producer:
             told.append(f"saved again by {producer[:60]}")
-        return told
+        return [*told, *self._added()]
+
+    def _added(self) -> Iterator[str]:
+        """Say what others have put into the file beside its pages."""
+        for name in self.attached:
+            if not name.endswith((RECORD_SUFFIX, REVIEW_SUFFIX)):
+                yield f"attached by others: {name[:60]}"
+        root = self.reader.root_object
+        names, form = (self._held(key) for key in ("/Names", "/AcroForm"))
+        runs = any("/AA" in each for each in (root, *self.pages)) or "/JavaScript" in names
+        if runs or _runs(root.get("/OpenAction")):
+            yield "holds a script or an action that runs when the file or a page is opened"
+        if "/XFA" in form:
+            yield "holds a form (XFA) that some readers show in place of the pages"
+        if "/Collection" in root:
+            yield "is made a portfolio: some readers show what is attached in place of the pages"
+
+    def _held(self, key: str) -> Any:
+        """Return what the file itself holds under a key, nothing if it holds none."""
+        root = self.reader.root_object
+        return root[key].get_object() if key in root else {}
 
     def _signers(self) -> list[str]:
         form = self.reader.root_object.get("/AcroForm")
@@ -133,7 +169,7 @@ class File:
         for reference in page.get("/Annots", None) or []:
             entry = reference.get_object()
             kind = str(entry.get("/Subtype", ""))
-            if kind != _LINK or "/AP" in entry:
+            if kind != _LINK or "/AP" in entry or _has_border(entry):
                 text = str(entry.get("/Contents", "") or "")[:60]
                 named = f"{kind.lstrip('/') or 'annotation'}{f' “{text}”' if text else ''}"
                 found.append((named, _rectangle(entry.get("/Rect"))))
