@@ -152,6 +152,11 @@ LAPS = (
     # 1.3 times the length before the least of 300 mm: 1.3 x 200, not 1.3 x 300
     W("laps.CLASS_B", {"l_d0": 200}, "max(1.3*200, 300) = 300"),
     W("laps.TWO_SIZES", {"l_sn": 546, "l_dk": 874}, "max(546, 874) = 874"),
+    W(
+        "laps.TWO_ROWS",
+        {"l_sw": 546, "l_dt": 874, "A_s1": 1000, "A_s2": 1250},
+        "max(546, 874*0.8) = 699.2",
+    ),
     W("laps.CLEAR_CORNERS", {"s_c": 74.1, "d_b": 25.2}, "74.1 - 25.2 = 48.9"),
     W("laps.CLEAR_PAIR", {"s_c": 197, "d_b": 25.2}, "197 - 50.4 = 146.6"),
     W("laps.COMPRESSION", {"f_y": 400, "d_b": 25.2}, "0.073*400*25.2 = 736", CHECK_12 + "b"),

@@ -26,6 +26,7 @@ from lineproof.beams.continuous.cutoff_support import (
     record_zero_moment,
 )
 from lineproof.beams.continuous.forces import ENDS
+from lineproof.beams.continuous.laps_handed_over import record_handed_over
 from lineproof.beams.continuous.laps_record import record_crowded, record_laps
 from lineproof.beams.continuous.resistance import top_layers
 from lineproof.beams.continuous.resistance_cover import COUNT, Coverage
@@ -59,6 +60,7 @@ def record_lengths_and_ends(writers: Writers, runs: Runs) -> tuple[Writers, Leng
         if designed.bars.top[support - 1].web:
             _record_top(writers, frame, lengths, runs, support)
     record_laps(writers, lengths, runs)
+    record_handed_over(writers, lengths, runs)
     record_crowded(writers, lengths, runs)
     return writers, lengths, hooked
 

@@ -60,6 +60,13 @@ TWO_SIZES = _formula(
     title="Length of a lap of bars of different sizes",
     basis=FROM_MEMORY,
 )
+TWO_ROWS = _formula(
+    "l_s = max(l_sw, l_dt*A_s1/A_s2)",
+    unit="mm",
+    clause="12.15",
+    title="Length of a lap of two rows of bars, the stronger one stressed by the weaker one alone",
+    basis=FROM_MEMORY,
+)
 COMPRESSION = _formula(
     "l_sc = max(0.073*f_y*d_b, 300)",
     clause="12.16.1",
@@ -115,5 +122,14 @@ ROOM = _criterion(
     key="lap-room",
 )
 
-FORMULAS = (CLASS_A, CLASS_B, TWO_SIZES, COMPRESSION, COMPRESSION_STRONG, CLEAR_CORNERS, CLEAR_PAIR)
+FORMULAS = (
+    CLASS_A,
+    CLASS_B,
+    TWO_SIZES,
+    TWO_ROWS,
+    COMPRESSION,
+    COMPRESSION_STRONG,
+    CLEAR_CORNERS,
+    CLEAR_PAIR,
+)
 CRITERIA = (LAPPABLE, EXCESS_FOR_A, SHARE_FOR_A, CLOSE, LONG_ENOUGH, ROOM)

@@ -339,6 +339,8 @@ _ROWS = (
     ("l_s", "ℓ", "s", "", "length of a tension lap", "mm"),
     ("l_sn", "ℓ", "sn", "", "length of a tension lap of the thinner bars", "mm"),
     ("l_dk", "ℓ", "dk", "", "development length of the thicker bars", "mm"),
+    ("l_sw", "ℓ", "sw", "", "length of a tension lap of the bars of the weaker row", "mm"),
+    ("l_dt", "ℓ", "dt", "", "development length of the bars of the stronger row", "mm"),
     ("l_sc", "ℓ", "sc", "", "length of a compression lap", "mm"),
     ("r_sp", "r", "sp", "", "share of the bars spliced within one lap length", ""),
     ("s_nc", "s", "nc", "", "distance between bars lapped without contact", "mm"),
