@@ -278,3 +278,17 @@ def test_ties_around_hooks_are_not_invented_where_bars_and_stirrups_are_given() 
     laid = flow.start(**given)
     assert "12.5.4" not in [each["clause"] for each in flow.run(laid).not_covered]
     assert any(zone.around_hooks for zone in laid.design.detailing.stirrups)
+
+
+def test_hanger_stirrups_of_a_beam_as_built_are_listed_as_not_covered() -> None:
+    """Their number is what carries, not what stands: with bars and stirrups given that is said."""
+    given: dict[str, Any] = {"spans": ["6 m"], "bar_runs": HOOKED}
+    stirrups = [{"span": 1, "spacing": "250 mm"}]
+    for support, as_built, listed in (
+        ("girder 300 mm", True, True),
+        ("girder 300 mm", False, False),
+        ("wall 300 mm", True, False),
+    ):
+        beam = flow.start(**given, supports=[support] * 2, stirrups=stirrups if as_built else None)
+        rows = [each for each in beam.sheet.not_covered if "Hanger" in each["check"]]
+        assert bool(rows) == listed

@@ -310,6 +310,9 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
         rows.append({"check": "Torsion from the slab: no torque is given", "clause": "11.3.10"})
     if any(support.carrier == "girder" for support in inputs.supports):
         rows.append({"check": "Torsion of the girders by the end moments", "clause": "11.3.10"})
+        if inputs.as_built:
+            what = "Hanger stirrups that stand in the girders: only those needed are calculated"
+            rows.append({"check": what, "clause": "11.2.12"})
     if _ties_unknown(inputs):
         what = "Ties around the hooks where the beam ends: none are given with bars and stirrups"
         rows.append({"check": what, "clause": "12.5.4"})
