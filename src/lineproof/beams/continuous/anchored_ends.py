@@ -15,6 +15,7 @@ from lineproof.beams.continuous.anchorage import (
     available,
     develop,
     development_length,
+    hook_at,
     hook_part,
     room_beside,
 )
@@ -34,7 +35,7 @@ def least_anchored(bare: Designed, span: int, size: str, needed: float) -> float
 
 
 def _least_at(bare: Designed, support: int, size: str, needed: float) -> float:
-    A_b, hooked = BARS.number(size, "A_b"), hook_part(bare, support, size)
+    A_b, hooked = BARS.number(size, "A_b"), _hooked(bare, support, size)
     if hooked >= 1:
         return needed
     for number in range(2, MOST_BARS + 1):
@@ -68,8 +69,17 @@ def top_part(bare: Designed, support: int, top: TopBars) -> float:
 def _counted(bare: Designed, support: int, bar: Bar) -> float:
     """Return the part of a top bar that counts: straight where it develops so, else by its hook."""
     straight = _straight(bare, support, bar)
-    hooked = hook_part(bare, support, bar.size, outside=bar.place == "overhang")
+    hooked = _hooked(bare, support, bar.size, outside=bar.place == "overhang")
     return straight if straight >= 1 or hooked == 0 else hooked
+
+
+def _hooked(bare: Designed, support: int, size: str, *, outside: bool = False) -> float:
+    """Return the part of its strength that a hook develops, of lengths as they are recorded."""
+    part = hook_part(bare, support, size, outside=outside)
+    if part in (0.0, 1.0):
+        return part
+    l_dh = hook_at(bare, support, size, outside=outside).l_dh
+    return counted_part(available(bare, support), l_dh)
 
 
 def end_hook(designed: Designed, support: int, run: BarRun) -> Hook:
