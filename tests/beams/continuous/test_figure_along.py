@@ -227,6 +227,8 @@ def test_faces_are_marked() -> None:
 
     assert sum(s.dash == "dotted" for s in lines) == 6
     assert sum(s.dash == "chain" for s in lines) == 3
+    told = "axes of the supports, chained; their faces and the values marked, dotted"
+    assert f"Thin lines: {told}." in words_of(figure)
 
 
 def test_deflections() -> None:

@@ -32,6 +32,7 @@ VALUE, NOTE, TICK_TEXT = 2.4, 2.6, 2.5
 LINE = 3.3
 SAMPLE = 11.0
 THICK = 1.2
+THIN_LINES = "Thin lines: axes of the supports, chained; their faces and the values marked, dotted."
 EXCEEDED = "The resistance is EXCEEDED where the axis is drawn thick."
 MILLIMETRES = 1e-3
 """Stations are printed in m."""
@@ -230,7 +231,7 @@ def _marks(axes: Axes, band: _Band, way: float) -> list[Shape]:
 
 def _legend(data: Along) -> list[tuple[str, Dash | None]]:
     lines: list[tuple[str, Dash | None]] = [(each.name, each.dash) for each in data.curves]
-    lines += [(note, None) for note in data.notes]
+    lines += [(note, None) for note in (THIN_LINES, *data.notes)]
     if data.exceeded:
         lines.append((EXCEEDED, None))
     return lines
