@@ -11,6 +11,7 @@ from lineproof.notebook.read import read_calc
 from lineproof.package import build_package, to_html
 from lineproof.resources import folder
 
+from ..package.whole_beam import whole_beam  # noqa: TID252 - one beam for all packages
 from .review_page import (
     ORDER,
     Open,
@@ -101,6 +102,21 @@ def test_the_page_is_never_wider_than_the_window(opened: Open, width: int) -> No
     page.set_viewport_size({"width": width, "height": 800})
     row(page, "span-1/d").locator(".result").click()
     page.keyboard.press("a")
+    assert page.evaluate("document.documentElement.scrollWidth <= window.innerWidth")
+
+
+def test_a_drawing_keeps_the_size_of_its_texts_on_a_narrow_screen(
+    context: BrowserContext, tmp_path: Path
+) -> None:
+    """The elevation is 178 mm wide, at 96 points an inch 673: moved sideways, not made smaller."""
+    path = tmp_path / "beam.html"
+    path.write_text(to_html(build_package([whole_beam().close().data])), encoding="utf-8")
+    page = context.new_page()
+    page.set_viewport_size({"width": 390, "height": 800})
+    page.goto(path.as_uri())
+    box = page.locator("figure svg").first.bounding_box()
+    assert box is not None
+    assert box["width"] > 600
     assert page.evaluate("document.documentElement.scrollWidth <= window.innerWidth")
 
 
