@@ -133,7 +133,9 @@ class Desk {
     const words = FILTERS.find(([key]) => key === filter)[1];
     this.panel.say(shown ? `${words}: ${shown.size} lines shown.` : "All lines shown.");
     const { line } = this.work;
-    if (line?.element && (!shown || shown.has(line))) this.bringIn(line);
+    if (!line?.element) return;
+    if (!shown || shown.has(line)) this.bringIn(line);
+    else if (line.element.contains(document.activeElement)) this.panel.root.focus(); // it is hidden now
   }
 
   deepen(way, depth) {

@@ -96,6 +96,18 @@ def test_the_tools_come_first_by_tab_and_by_a_key_from_any_line(
     assert page.evaluate("document.activeElement.id") == "data/b"
 
 
+def test_a_filter_that_hides_the_line_in_hand_takes_the_focus_to_the_tools(opened: Open) -> None:
+    """Else it is nowhere, and who listens to the page is sent to its beginning."""
+    page = opened()
+    page.keyboard.press("Escape")
+    page.keyboard.press("n")
+    page.keyboard.press("2")
+    page.wait_for_timeout(100)
+    assert page.evaluate("document.activeElement.id") == "rv"
+    page.keyboard.press("n")
+    assert page.evaluate("document.activeElement.id") == here(page) == "span-1/within"
+
+
 @pytest.mark.parametrize("width", [1400, 1000, 400])
 def test_the_page_is_never_wider_than_the_window(opened: Open, width: int) -> None:
     page = opened()
