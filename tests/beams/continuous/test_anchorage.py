@@ -94,18 +94,18 @@ def test_bars_in_the_overhang() -> None:
 
 
 def test_hooks_check_12b() -> None:
-    """100 x 25.2/sqrt(35) = 426, ties at 3 bar diameters 0.8: 340.8.
+    """100 x 25.2/sqrt(35) = 426; covers of 51 mm: 12.5.4 asks for ties, which earn nothing.
 
     In a column of 500 mm, 75 mm wider on each side than the web, the side cover is 126 mm: 0.7 of
-    it, 238.5; with no ties (they are due, for the cover of 51 mm at the top) it would be 298.
+    it; ties at 3 bar diameters, for the cover of 51 mm at the top, 0.8: 238.5, without them 298.
     """
     bare = beam_of(*ONE)
     assert hook_at(bare, 1, "25M").l_hb == pytest.approx(426, abs=0.5)
-    assert hook_at(bare, 1, "25M").l_dh == pytest.approx(0.8 * 425.96, abs=0.1)
+    assert hook_at(bare, 1, "25M").l_dh == pytest.approx(425.96, abs=0.1)
     wide = replace(bare, breadths={1: 500.0})
     assert hook_at(wide, 1, "25M").l_dh == pytest.approx(0.7 * 0.8 * 425.96, abs=0.1)
     assert hook_at(wide, 1, "25M").l_dh / 0.8 == pytest.approx(298, abs=0.5)
-    assert hook_at(wide, 2, "25M").l_dh == pytest.approx(340.8, abs=0.1)
+    assert hook_at(wide, 2, "25M").l_dh == pytest.approx(425.96, abs=0.1)
 
 
 def test_tail_cover_below_50_earns_nothing() -> None:
@@ -168,19 +168,19 @@ def test_recorded_lengths_are_the_numbers(expression: str, shape: str) -> None:
 
 
 def test_ties_earn_nothing_for_bars_in_the_overhangs_alone() -> None:
-    """Check 12b without the factor 0.8: 426 mm; bars of the web beside them keep it: 340.8 mm."""
-    bare = beam_of(*ONE)
+    """Check 12b without the factor 0.8: 298 mm; bars of the web beside them keep it: 238.5 mm."""
+    bare = replace(beam_of(*ONE), breadths={1: 500.0})
     top = SupportTop((BarLayer(2, "25M"),), 2)
     spread = replace(bare, bars=SectionBars((), (top, SupportTop()), "15M"))
-    assert hook_at(spread, 1, "25M", outside=True).l_dh == pytest.approx(425.96, abs=0.1)
-    assert hook_at(spread, 1, "25M").l_dh == pytest.approx(0.8 * 425.96, abs=0.1)
+    assert hook_at(spread, 1, "25M", outside=True).l_dh == pytest.approx(0.7 * 425.96, abs=0.1)
+    assert hook_at(spread, 1, "25M").l_dh == pytest.approx(0.7 * 0.8 * 425.96, abs=0.1)
     sheet = sheet_of(spread)
     with sheet.part("hook", "Hook"):
         place = record_hook(writers_of(sheet, spread), {}, 1, "25M", 75.0, outside=True)
-        assert place["l_dh"].value == pytest.approx(425.96, abs=0.1)
+        assert place["l_dh"].value == pytest.approx(0.7 * 425.96, abs=0.1)
         assert place["k_ht"].value == 1.0
     with sheet.part("web", "Hook"):
         place = record_hook(writers_of(sheet, spread), {}, 1, "25M", 75.0)
-        assert place["l_dh"].value == pytest.approx(0.8 * 425.96, abs=0.1)
+        assert place["l_dh"].value == pytest.approx(0.7 * 0.8 * 425.96, abs=0.1)
     assert "hook-ties" not in sheet.entries_of("hook")
     assert sheet.entries_of("web")["hook-ties"].value == (75.0, pytest.approx(75.6))

@@ -78,7 +78,11 @@ def _sections(model: Any, beam: beams.ContinuousBeam, **bars: dict[int, Any]) ->
         for face in ("bottom", "top")
     }
     unknown: Any = None
-    at = {field.name: beam.sheet.find(field.name).value for field in fields(Strengths)[:-1]}
+    at = {
+        field.name: beam.sheet.find(field.name).value
+        for field in fields(Strengths)
+        if field.type == "float"
+    }
     stirrups = Stirrups(model.inputs.stirrup, model.inputs.stirrup_legs, 300.0)
     basis = Basis(outline_of(model.sheet, model.inputs), Strengths(**at), stirrups)
     none = SectionBars((), (SupportTop(),) * (model.spans + 1), "15M")

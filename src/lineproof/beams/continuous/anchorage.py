@@ -23,7 +23,7 @@ from lineproof.standards.a23_3.bars import BARS, STIRRUP_BENDS
 Place = Literal["web", "overhang", "side face"]
 TOP_ROW, OTHER_ROW = "more than 300 mm of fresh concrete below", "other"
 COVERED_ROW, UNCOVERED_ROW = "side cover 60 mm and tail cover 50 mm or more", "less"
-TIED_ROW, UNTIED_ROW = "ties at 3 bar diameters or closer", "none"
+TIED_ROW, ASKED_ROW, UNTIED_ROW = hooks.TIE_FACTORS.rows
 WIDEST_BENDS = "400R"
 """A grade with the wider bends of the two."""
 TIE_STEP = 5.0
@@ -228,6 +228,16 @@ def side_cover(designed: Designed, support: int) -> float:
     return value(cover.COVER_TO_BARS, **given)
 
 
+def ties_row(*, side: bool, face: bool, tied: bool) -> str:
+    """Return the row of the factor for ties: those that small covers ask for earn nothing.
+
+    ``side`` and ``face`` tell whether these covers are large enough, ``tied`` whether ties stand.
+    """
+    if not tied:
+        return UNTIED_ROW
+    return TIED_ROW if side or face else ASKED_ROW
+
+
 def hook_at(designed: Designed, support: int, size: str, *, outside: bool = False) -> HookLength:
     """Return the hook of a bar at an end of the beam.
 
@@ -244,10 +254,10 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
         cover.COVER_TO_BARS, c_c=designed.outline.cover,
         d_bs=BARS.number(designed.basis.stirrups.size, "d_b"),
     )  # fmt: skip
-    side = holds(hooks.SIDE_COVERED, c_side=c_side)
+    side, face = holds(hooks.SIDE_COVERED, c_side=c_side), holds(hooks.FACE_COVERED, c_top=c_top)
     reduced = side and holds(hooks.TAIL_COVERED, c_tail=c_tail) and holds(laps.LAPPABLE, d_b=d_b)
-    tied = not (designed.as_built or (side and holds(hooks.FACE_COVERED, c_top=c_top)))
-    ties = TIED_ROW if tied and not outside else UNTIED_ROW
+    tied = not (designed.as_built or (side and face))
+    ties = ties_row(side=side, face=face, tied=tied and not outside)
     l_hb = value(basic, d_b=d_b, f_c=s.f_c, f_y=s.f_y)
     l_dh = value(
         hooks.L_DH,

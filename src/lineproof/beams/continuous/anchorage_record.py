@@ -11,15 +11,14 @@ from typing import Literal
 from lineproof.beams.continuous.anchorage import (
     COVERED_ROW,
     OTHER_ROW,
-    TIED_ROW,
     TOP_ROW,
     UNCOVERED_ROW,
-    UNTIED_ROW,
     Bar,
     bar_of,
     room_beside,
     sides_of,
     tie_spacing,
+    ties_row,
 )
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
@@ -286,7 +285,8 @@ def record_hook(
     reduced = bool(side and tail) and steps.holds(laps.LAPPABLE)
     if tied and outside:
         sheet.note("outside", _OUTSIDE, title="Ties around the hooks", clause="12.5.3")
-    _record_hook_factors(steps, designed, reduced=reduced, tied=tied and not outside)
+    row = ties_row(side=bool(side), face=bool(face), tied=tied and not outside)
+    _record_hook_factors(steps, designed, reduced=reduced, ties=row)
     steps.lines(basic, hooks.L_DH)
     if tied:
         _record_ties(steps, designed, ties, outside=outside)
@@ -306,10 +306,9 @@ def _record_ties(steps: Steps, designed: Designed, ties: float, *, outside: bool
     steps.check(hooks.TIES_CLEAR, a_max=steps.sheet.find("a_max"))
 
 
-def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, tied: bool) -> None:
+def _record_hook_factors(steps: Steps, designed: Designed, *, reduced: bool, ties: str) -> None:
     sheet = steps.sheet
     covered = COVERED_ROW if reduced else UNCOVERED_ROW
-    ties = TIED_ROW if tied else UNTIED_ROW
     steps.bind(
         k_hc=sheet.lookup("k_hc", hooks.COVER_FACTORS, covered),
         k_ht=sheet.lookup("k_ht", hooks.TIE_FACTORS, ties),

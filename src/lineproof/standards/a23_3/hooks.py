@@ -35,9 +35,10 @@ TIE_FACTORS = LookupTable(
     {"k_ht": ""},
     {
         "ties at 3 bar diameters or closer": {"k_ht": "0.8"},
+        "ties that 12.5.4 asks for, side and top cover small": {"k_ht": "1.0"},
         "none": {"k_ht": "1.0"},
     },
-    "A23.3, 12.5.3",
+    "A23.3, 12.5.3 and 12.5.4",
     clause="12.5.3",
     basis=FROM_MEMORY,
 )
