@@ -23,6 +23,16 @@ def test_the_project_file(tmp_path: Path) -> None:
     assert sheet.calc == {"id": "B1", "title": "T"}
 
 
+def test_a_project_file_that_is_not_there_is_told_with_what_to_do(tmp_path: Path) -> None:
+    """As of a calc that was copied without it, or a name mistyped."""
+    with pytest.raises(UserError) as caught:
+        Sheet.open("B1", project=tmp_path / "projct.toml", title="T")
+    assert str(caught.value) == (
+        f"{tmp_path / 'projct.toml'}: no such file; copy the project.toml of the project beside "
+        "the calc, or write its name"
+    )
+
+
 @pytest.mark.parametrize(
     ("content", "sentence"),
     [
@@ -64,8 +74,3 @@ def test_a_mark_that_editors_put_in_front_is_no_fault(tmp_path: Path) -> None:
     path = tmp_path / "project.toml"
     path.write_text("[codes]\npair = 'NBC 2015 + A23.3-14'\n", encoding="utf-8-sig")
     assert Sheet.open("B1", project=path).project["codes"]["pair"] == "NBC 2015 + A23.3-14"
-
-
-def test_a_missing_project_file(tmp_path: Path) -> None:
-    with pytest.raises(UserError, match="cannot be read \\(No such file"):
-        Sheet.open("B1", project=tmp_path / "none.toml")

@@ -41,7 +41,8 @@ def read_project(path: Path) -> dict[str, Any]:
 
     Raises :class:`UserError` that names file, line and what to write.
     """
-    content = read_file(path, LARGEST_FILE, "a project file holds facts only")
+    absent = "no such file; copy the project.toml of the project beside the calc, or write its name"
+    content = read_file(path, LARGEST_FILE, "a project file holds facts only", absent)
     try:
         data = tomllib.loads(content.decode("utf-8-sig"))  # some editors put a mark in front
     except UnicodeDecodeError:
