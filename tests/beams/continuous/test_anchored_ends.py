@@ -303,3 +303,17 @@ def test_hanger_stirrups_of_a_beam_as_built_are_listed_as_not_covered() -> None:
         beam = flow.start(**given, supports=[support] * 2, stirrups=stirrups if as_built else None)
         rows = [each for each in beam.sheet.not_covered if "Hanger" in each["check"]]
         assert bool(rows) == listed
+
+
+def test_hooks_of_corner_bars_beside_a_narrow_column_are_remarked() -> None:
+    """A web of 380 mm on columns of 250: (250 - 380)/2 + 30 + 11.3 = -23.7 mm of side cover."""
+    columns = dict.fromkeys((1, 2), ["450 mm x 250 mm x 3.6 m"] * 2)
+    record = flow.record_of(spans=["7 m"], supports=["column 450 mm"] * 2, columns=columns)
+
+    sides = {k: e for k, e in record.entries.items() if k.endswith("/c_side")}
+    assert sides
+    for key, entry in sides.items():
+        assert entry["value"] == pytest.approx(-23.7)
+        part = key.removesuffix("/c_side")
+        assert "NOT checked here" in record.entries[f"{part}/beside-the-column"]["text"]
+        assert record.entries[f"{part}/k_hc"]["value"] == 1.0

@@ -218,12 +218,12 @@ class HookLength:
 
 
 def side_cover(designed: Designed, support: int) -> float:
-    """Return the side cover of the corner bars in a support."""
+    """Return the side cover of the corner bars in a support; below 0 they lie beside a column."""
     outline = designed.outline
     d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
     given = {"c_c": outline.cover, "d_bs": d_bs}
-    breadth = designed.breadths.get(support, 0.0)
-    if breadth > outline.b_w:
+    breadth = designed.breadths.get(support, outline.b_w)
+    if breadth != outline.b_w:
         return value(hooks.SIDE_COVER_COLUMN, b_col=breadth, b_w=outline.b_w, **given)
     return value(cover.COVER_TO_BARS, **given)
 

@@ -35,6 +35,10 @@ BY_TABLE = "The development length is that of the table; the general expression 
 BY_GENERAL = "The development length is that of the general expression; the table stands beside it."
 
 _OUTSIDE = "In the overhangs bars stand outside the ties: the factor for ties is not used."
+_BESIDE = (
+    "The corner bars of the beam lie beside the column, which is narrower: their hooks are NOT "
+    "anchored in it. Whether the joint takes them is NOT checked here; its design must show it."
+)
 TIED_IN_WEB = "Ties around the hooks within the web, of small cover where the beam ends"
 _NO_TIES = (
     "Where the cover is so small, ties must stand around the hooks. Bars and stirrups are those "
@@ -270,12 +274,14 @@ def record_hook(
         d_bs=sheet.lookup("d_bs", BARS, designed.basis.stirrups.size, "d_b"),
         d_b=sheet.lookup("d_b", BARS, size),
     )
-    breadth = designed.breadths.get(support, 0.0)
-    if breadth > designed.outline.b_w:
+    breadth = designed.breadths.get(support, designed.outline.b_w)
+    if breadth != designed.outline.b_w:
         steps.bind(b_col=sheet.given("b_col", plain(breadth, "mm"), source="column"))
         steps.line(hooks.SIDE_COVER_COLUMN)
     else:
         steps.line(hooks.SIDE_COVER)
+    if steps.entry("c_side").value < 0:
+        sheet.note("beside-the-column", _BESIDE, title="Hooks of the corner bars", clause="12.5")
     steps.bind(c_tail=sheet.given("c_tail", plain(designed.c_tail, "mm"), source="as laid"))
     steps.line(hooks.FACE_COVER)
     side, tail = steps.decide(hooks.SIDE_COVERED), steps.decide(hooks.TAIL_COVERED)

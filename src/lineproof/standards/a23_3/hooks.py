@@ -93,7 +93,7 @@ SIDE_COVER = _formula(
 SIDE_COVER_COLUMN = _formula(
     "c_side = (b_col - b_w)/2 + c_c + d_bs",
     clause="geometry",
-    title="Side cover of the hook in a wider support",
+    title="Side cover of the hook in a support of another width",
     basis=MECHANICS,
 )
 FACE_COVER = _formula(
