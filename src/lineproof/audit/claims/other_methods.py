@@ -10,6 +10,7 @@ from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass
 
 from lineproof.audit.claims.coefficient_moments import by_coefficients
+from lineproof.audit.claims.live_loads import by_reduction
 from lineproof.audit.claims.propagate import Form, Worker, World, combined
 from lineproof.audit.data import Claim, Interval
 from lineproof.audit.graph import Graph, Node
@@ -316,7 +317,13 @@ def _coefficients(bench: Bench, node: Node) -> Iterator[Other]:
         yield Other(sentence, interval, (node.id,))
 
 
+def _reduced_load(bench: Bench, node: Node) -> Iterator[Other]:
+    if node.symbol == "w_L":
+        for sentence, interval in by_reduction(bench.graph, bench.world.used, node):
+            yield Other(sentence, interval, (node.id,))
+
+
 _WAYS: tuple[Callable[[Bench, Node], Iterator[Other]], ...] = (
     _shear, _development, _modulus, _midspan_inertia, _stress_allowance, _table_resistance,
-    _table_ratio, _coefficients,
+    _table_ratio, _coefficients, _reduced_load,
 )  # fmt: skip

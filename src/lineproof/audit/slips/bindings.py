@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from functools import partial
 
 from lineproof.audit.graph import real
-from lineproof.audit.slips.edits import TOP, Edit, Line
+from lineproof.audit.slips.edits import SUM, TOP, Edit, Line
 from lineproof.audit.slips.values import others_for
 from lineproof.formula.compiled import NOT_COMPUTED
 
@@ -27,9 +28,18 @@ def edits_of_bindings(line: Line) -> Iterator[Edit]:
         if not at or target not in line.scope.units:
             continue
         ways = [tuple(at)] + ([(k,) for k in at] if len(at) > 1 else [])
+        if len(at) > 1 and all(_is_term(line, k) for k in at):
+            words = partial("{} left out wherever it stands".format, line.named(name))
+            yield Edit("term", tuple(at), 0.0, 0.0, words, swap=(target, ""))
         for other in others_for(line, target, name):
             for places in ways if other.family in AT_ONE else ways[:1]:
                 yield other.edit(places, target, ONE_OF_MANY if len(places) < len(at) else 0.0)
+
+
+def _is_term(line: Line, at: int) -> bool:
+    """Tell whether a place is a term of a sum, which may be forgotten."""
+    above = line.places.places[at].above
+    return above >= 0 and line.places.places[above].operation in SUM
 
 
 def edits_of_arguments(line: Line) -> Iterator[Edit]:

@@ -20,6 +20,7 @@ TOP = (0,)
 IN_METRES = {"mm": 1e3, "mm2": 1e6, "mm4": 1e12, "N": 1e3, "N.mm": 1e6, "MPa": 1e-3}
 """What one m, m2, m4, kN, kN.m and kPa are in internal units."""
 SUM, PRODUCT = ("+", "-"), ("*", "/")
+ANGULAR = ("sin", "cos", "tan", "cot")
 NOTHING = 1e-3
 """Part of a term that is nothing beside it: what is left of kN.m once kN are divided by mm."""
 
@@ -201,7 +202,8 @@ def _sort_of_factor(line: Line, at: int, factor: int) -> str:
     if isinstance(tree, Name):
         target = line.node.args.get(tree.id, "")
         return "factor" if line.scope.units.get(target) == "" else "quantity"
-    return "quantity"
+    is_of_angle = isinstance(tree, Call) and line.places.places[factor].operation in ANGULAR
+    return "factor" if is_of_angle else "quantity"
 
 
 def _brackets(line: Line, at: int, factor: int, value: float, way: int) -> Iterator[Edit]:
@@ -326,7 +328,7 @@ def _angle(line: Line, at: int, function: str, angle: float, half: float) -> Ite
         value, spread = _in_radians(OPERATIONS[function], angle, half)
         words = partial("{} taken in degrees by a function of radians".format, text)
         yield Edit("degrees", (at,), value, spread, words)
-    for other in ("sin", "cos", "tan", "cot"):
+    for other in ANGULAR:
         if other != function and math.sin(math.radians(angle)):
             value = OPERATIONS[other](angle)
             words = partial("{} of {} in place of {}".format, other, text, function)

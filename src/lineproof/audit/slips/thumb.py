@@ -8,10 +8,11 @@ from typing import NamedTuple
 
 from lineproof.audit.graph import evaluated
 from lineproof.audit.junior.foreign import rules_of
-from lineproof.audit.slips.edits import TOP, Edit, Line
+from lineproof.audit.slips.edits import TOP, Edit, Line, words_of
 from lineproof.audit.slips.tree import Pair
-from lineproof.formula import Tree, names_of, parse_line
+from lineproof.formula import Name, Tree, names_of, parse_line
 from lineproof.formula.compiled import NOT_COMPUTED
+from lineproof.standards.nbc.combinations import DEAD
 
 
 class _Rule(NamedTuple):
@@ -38,12 +39,31 @@ _ROWS = (
      "a simple span"),
     ("simple span", "delta_i = 5*w_s*l**4/(384*E_c*I_g)", "5*w_s*l**4/(384*E_c*I_g)",
      "not cracked"),
+    ("thumb", "d = 0.9*h", "0.9*h", "a depth assumed and not worked out"),
+    ("thumb", "d = h - 60", "h - 60", "a depth assumed and not worked out"),
+    ("thumb", "d = h - 65", "h - 65", "a depth assumed and not worked out"),
+    ("thumb", "d = h - 70", "h - 70", "a depth assumed and not worked out"),
+    ("thumb", "d_v = d - a/2", "d - a/2", "the lever arm of flexure"),
+    ("thumb", "d_v = 0.72*d", "0.72*d", "the factor of h put to d"),
+    ("thumb", "d_v = 0.9*h", "0.9*h", "the factor of d put to h"),
+    ("thumb", "w_sl = gamma_w*h_f*(b_tr - b_w)", "gamma_w*h_f*(b_tr - b_w)",
+     "the slab on the clear width alone"),
+    ("thumb", "w_fl = q_fl*(b_tr - b_w)", "q_fl*(b_tr - b_w)",
+     "the floor on the clear width alone"),
+    ("centreline", "T_f = t_f*l/2", "t_f*l/2", "the torsion at the axis of the support"),
+    ("centreline", "T_f = t_f*(l/2 - x_n)", "t_f*(l/2 - x_n)",
+     "the ends held at the axes of the supports"),
+    ("thumb", "A_oh = (b_w - 2*c_c)*(h - 2*c_c)", "(b_w - 2*c_c)*(h - 2*c_c)",
+     "to the outside of the stirrup"),
+    ("thumb", "p_h = 2*(b_w - 2*c_c + h - 2*c_c)", "2*(b_w - 2*c_c + h - 2*c_c)",
+     "to the outside of the stirrup"),
     ("thumb", "delta_t = zeta_s*delta_DL", "zeta_s*delta_DL",
      "the deflection under all loads taken as sustained"),
     ("thumb", "delta_at = (zeta_s - zeta_sa)*delta_DL", "(zeta_s - zeta_sa)*delta_DL",
      "the deflection under all loads taken as sustained"),
 )  # fmt: skip
 _FACE = "the moment at the axis less V*b/3, b the width of the support, for that at its face"
+_NO_MOMENTS = "the moments at the supports left out, as of simple spans"
 _OF_HALF = 2 / 3
 """A third of the width of a support, in halves of it: x_f is half the width."""
 
@@ -63,15 +83,23 @@ def _rules(symbol: str) -> tuple[_Rule, ...]:
 
 def rules_of_thumb(line: Line) -> Iterator[Edit]:
     """Give what other rules than its own make of a line, where all that they need is about."""
-    names = _names(line)
     made_by = str(line.node.entry.get("formula", "")).partition("=")[0].strip()
-    for symbol in dict.fromkeys((line.scope.stems[line.node.id], made_by)):
-        for rule in _rules(symbol):
+    symbols = dict.fromkeys((line.scope.stems[line.node.id], made_by))
+    rules = [rule for symbol in symbols for rule in _rules(symbol)]
+    at_face = line.node.symbol == "M_f" and line.node.part.startswith("hog")
+    if rules or at_face or "w_f" in symbols:
+        names = _names(line)
+        for rule in rules:
             made = _worked(line, rule.tree, names)
             if made is not None:
                 yield Edit(rule.family, TOP, *made, partial(str, rule.words))
-    if line.node.symbol == "M_f" and line.node.part.startswith("hog"):
-        yield from _at_a_third(line, names)
+        if at_face:
+            yield from _at_a_third(line, names)
+        if "w_f" in symbols:
+            yield from _weight_again(line, names)
+    if line.is_load:
+        yield from _simple_supports(line)
+        yield from _shared(line)
 
 
 def _worked(line: Line, tree: Tree, names: Mapping[str, str]) -> Pair | None:
@@ -95,11 +123,18 @@ def _worked(line: Line, tree: Tree, names: Mapping[str, str]) -> Pair | None:
 
 
 def _names(line: Line) -> dict[str, str]:
-    """Return quantities by name: those of the line, of its part, and those used in its part."""
+    """Return quantities by name: of the line, of its part, used in it, or beside an argument."""
     valued, part = line.scope.units, line.scope.by_part[line.node.part]
+    beside = dict[str, str]()
+    for target in reversed(
+        tuple(line.node.args.values())
+    ):  # what stands with an argument, and is used so
+        there = line.scope.by_part[line.scope.graph[target].part]
+        beside |= {name: i for n in reversed(there) for name, i in n.args.items() if i in valued}
+        beside |= {n.symbol: n.id for n in there if n.id in valued}
     used = {name: i for n in reversed(part) for name, i in n.args.items() if i in valued}
     own = {n.symbol: n.id for n in part if n.id in valued}
-    return used | own | {name: i for name, i in line.node.args.items() if i in valued}
+    return beside | used | own | {name: i for name, i in line.node.args.items() if i in valued}
 
 
 def _at_a_third(line: Line, names: dict[str, str]) -> Iterator[Edit]:
@@ -111,3 +146,43 @@ def _at_a_third(line: Line, names: dict[str, str]) -> Iterator[Edit]:
     value = abs(moment) - shear * x * _OF_HALF
     half = of_moment + of_shear * x * _OF_HALF
     yield Edit("thumb", TOP, value, half, lambda: _FACE)
+
+
+def _weight_again(line: Line, names: Mapping[str, str]) -> Iterator[Edit]:
+    """Give a factored load to which the weight of the beam is added, which the dead load holds."""
+    value, half = line.pair(0)
+    for symbol in ("w_wb", "w_bm"):
+        if symbol in names:
+            weight, of_weight = line.pairs[names[symbol]]
+            for factor in (float(DEAD), 1.0):
+                words = partial(_again, line, names[symbol], factor)
+                yield Edit("thumb", TOP, value + factor * weight, half + of_weight, words)
+
+
+def _again(line: Line, weight: str, factor: float) -> str:
+    times = f"{factor:g} times " if factor != 1 else ""
+    return f"{times}{words_of(line.scope, weight)} added again, which the dead load holds"
+
+
+def _simple_supports(line: Line) -> Iterator[Edit]:
+    """Give a reaction or shear from which the moments of the supports are left out, all of them."""
+    tree = line.node.tree
+    moments = [name for name in line.node.args if name.startswith("M_")]
+    if tree is None or not moments or line.node.symbol[0] not in "RV":
+        return
+    pairs = {name: line.pairs[target] for name, target in line.node.args.items()}
+    values = {name: 0.0 if name in moments else value for name, (value, _) in pairs.items()}
+    try:
+        value = evaluated(tree, values)
+    except NOT_COMPUTED:
+        return
+    half = abs(value) * max((h / abs(v) for v, h in pairs.values() if v), default=0.0)
+    yield Edit("simple span", TOP, value, half, lambda: _NO_MOMENTS)
+
+
+def _shared(line: Line) -> Iterator[Edit]:
+    """Give half and twice a load that is taken over from another line."""
+    if isinstance(line.node.tree, Name) and line.scope.units[line.node.id] == "N/mm":
+        value, half = line.pair(0)
+        for factor, why in ((0.5, "half of the load taken"), (2.0, "the load taken twice")):
+            yield Edit("tributary", TOP, value * factor, half * factor, partial(str, why))
