@@ -157,13 +157,16 @@ def _factor(
 ) -> Iterator[Edit]:
     value, half = pair
     relative = half / abs(value) if value else 0.0
+    own, of_own = line.pair(factor)
+    again = of_own / abs(own) if own else 0.0
 
-    def edit(family: str, value: float, said: str) -> Edit:
-        return Edit(family, (at,), value, abs(value) * relative, partial(_said, line, factor, said))
+    def edit(family: str, value: float, said: str, more: float = 0.0) -> Edit:
+        spread = abs(value) * (relative + more)
+        return Edit(family, (at,), value, spread, partial(_said, line, factor, said))
 
     yield edit(family, value / size, "{} left out")
     if family not in ("load factor", "diameter"):
-        yield edit(f"{family} twice", value * size, "{} taken twice")
+        yield edit(f"{family} twice", value * size, "{} taken twice", again)
     metre = line.metre(line.places.places[factor].tree)
     if metre != 1.0:
         yield edit(family, value / size * metre, "{} left out, the rest worked in kN and m")

@@ -114,7 +114,7 @@ class Target:
         """Between these values fits are sought at first."""
         wanted = self.claim.stands_for
         size = max(abs(wanted.low), abs(wanted.high))
-        room = (LOOSE * self.relative + (ROUNDED if self.relative else 0.0) + 1e-9) * size
+        room = (LOOSE * self.relative + ROUNDED) * size
         return wanted.low - room, wanted.high + room
 
 
