@@ -231,6 +231,7 @@ class _Pages:
         """Give running heads and repeated heads of tables that are not those of the record."""
         heads = {(m.key, round(m.y)) for m in self.fresh if m.zone is Zone.RUNNING}
         known = {m.key for m in self.fresh if m.zone is not Zone.RUNNING}
+        again = {(m.key, round(m.y)) for m in self.fresh if m.zone is Zone.AGAIN}
         top: dict[int, float] = defaultdict(float)
         for mark in self.theirs:
             top[mark.page] = max(top[mark.page], mark.y)
@@ -240,6 +241,7 @@ class _Pages:
                 and ((mark.key, round(mark.y)) not in heads or self._miscounted(mark))
             ) or (
                 mark.zone is Zone.AGAIN
+                and (mark.key, round(mark.y)) not in again  # below a drawing, as printed anew
                 and (mark.key not in known or mark.y < top[mark.page] - _SAME_HEIGHT)
             )
             if wrong:
