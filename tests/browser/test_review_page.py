@@ -2,18 +2,13 @@
 
 from __future__ import annotations
 
-from pathlib import Path
-from typing import TYPE_CHECKING
-
 from lineproof.audit.data import Severity
 from lineproof.audit.review.data import State
 from lineproof.audit.review.read import read_review
-from lineproof.package import build_package, to_html
 
 from .review_page import (
     ORDER,
     Open,
-    beam,
     here,
     html_with,
     margins,
@@ -24,10 +19,6 @@ from .review_page import (
     traces,
     with_finding,
 )
-
-if TYPE_CHECKING:
-    from playwright.sync_api import BrowserContext
-
 
 # Tracing ------------------------------------------------------------------------------------------
 
@@ -97,13 +88,8 @@ def test_light_is_told_in_words_and_frames_and_not_by_colour_only(opened: Open) 
     assert words == ['"here"', '"rests on"', '"goes into"']
 
 
-def test_a_value_opens_the_tools_and_a_link_stays_a_link(
-    context: BrowserContext, tmp_path: Path
-) -> None:
-    path = tmp_path / "beam.html"
-    path.write_text(to_html(build_package([beam()])), encoding="utf-8")
-    page = context.new_page()
-    page.goto(path.as_uri())
+def test_a_value_opens_the_tools_and_a_link_stays_a_link(shown: Open) -> None:
+    page = shown()
     tools = page.get_by_role("complementary", name="Review tools")
     row(page, "span-1/d").locator("a").click()
     assert page.evaluate("location.hash") == "#data/h"

@@ -23,7 +23,7 @@ from .review_page import (
 )
 
 if TYPE_CHECKING:
-    from playwright.sync_api import Browser, BrowserContext
+    from playwright.sync_api import Browser
 
 
 def test_on_paper_nothing_of_the_tools_is_seen(opened: Open) -> None:
@@ -74,14 +74,9 @@ def test_the_tools_can_be_used_without_a_mouse(opened: Open) -> None:
     assert margins(page) == {"data/b": "✓ accepted"}
 
 
-def test_the_tools_come_first_by_tab_and_by_a_key_from_any_line(
-    context: BrowserContext, tmp_path: Path
-) -> None:
+def test_the_tools_come_first_by_tab_and_by_a_key_from_any_line(shown: Open) -> None:
     """Behind the thousands of links of a long package nobody would reach them."""
-    path = tmp_path / "beam.html"
-    path.write_text(to_html(build_package([beam()])), encoding="utf-8")
-    page = context.new_page()
-    page.goto(path.as_uri())
+    page = shown()
     page.keyboard.press("Tab")
     assert page.evaluate("document.activeElement.textContent") == "Review"
     page.keyboard.press("Enter")
@@ -117,15 +112,10 @@ def test_the_page_is_never_wider_than_the_window(opened: Open, width: int) -> No
     assert page.evaluate("document.documentElement.scrollWidth <= window.innerWidth")
 
 
-def test_a_drawing_keeps_the_size_of_its_texts_on_a_narrow_screen(
-    context: BrowserContext, tmp_path: Path
-) -> None:
+def test_a_drawing_keeps_the_size_of_its_texts_on_a_narrow_screen(shown: Open) -> None:
     """The elevation is 178 mm wide, at 96 points an inch 673: moved sideways, not made smaller."""
-    path = tmp_path / "beam.html"
-    path.write_text(to_html(build_package([whole_beam().close().data])), encoding="utf-8")
-    page = context.new_page()
+    page = shown(to_html(build_package([whole_beam().close().data])))
     page.set_viewport_size({"width": 390, "height": 800})
-    page.goto(path.as_uri())
     box = page.locator("figure svg").first.bounding_box()
     assert box is not None
     assert box["width"] > 600

@@ -218,7 +218,7 @@ class HookLength:
 
 
 def side_cover(designed: Designed, support: int) -> float:
-    """Return the side cover of the corner bars in a support; below 0 they lie beside a column."""
+    """Return the side cover of the corner bars in a support [mm]; below 0 beside a column."""
     outline = designed.outline
     d_bs = BARS.number(designed.basis.stirrups.size, "d_b")
     given = {"c_c": outline.cover, "d_bs": d_bs}

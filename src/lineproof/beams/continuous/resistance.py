@@ -258,7 +258,7 @@ def moment_of(designed: Designed, A: Floats, d: Floats, b: Floats) -> Floats:
 
 
 def area_for(designed: Designed, M: float, d: float, b: float) -> float:
-    """Return the area of bars that a moment requires.
+    """Return the area of bars [mm2] that a moment M [N.mm] requires at d in a width b [mm].
 
     Where the concrete balances no such moment, that of the largest which it does.
     """
