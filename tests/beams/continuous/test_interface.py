@@ -4,7 +4,9 @@ from __future__ import annotations
 
 import pytest
 
+from lineproof.beams.analysis.model import Beam, PointLoad, Span, Support
 from lineproof.beams.continuous.cures_sought import cures_of
+from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.interface import (
     Beside,
     SlabBars,
@@ -92,7 +94,7 @@ def test_length_beside_the_largest_moment() -> None:
     found = beside_sag(one.forces, 1)
     assert found.at == pytest.approx(3000.0)
     assert found.zero == 0.0
-    assert found.at_face
+    assert found.where == "face of the support"
     lengths = (6000.0, 6000.0)
     two = case_of(lengths, uniform(lengths, 10, 0), width=400.0, combinations=DEAD_ONLY)
     for span, at, zero in ((1, 2250.0, 200.0), (2, 3750.0, 5800.0)):
@@ -102,7 +104,34 @@ def test_length_beside_the_largest_moment() -> None:
     hog = beside_hog(two.forces, 2, "right")
     assert hog.at == pytest.approx(200.0)
     assert hog.zero == pytest.approx(1500.0)
-    assert not hog.at_face
+    assert hog.where == "found along the span"
+
+
+@pytest.mark.parametrize("tip", [2800.0, 9.186351706 * 304.8, 2743.2, 1933.3])
+def test_moment_is_zero_at_a_free_end(tip: float) -> None:
+    """A cantilever from a face 150 mm off its axis: from there to the tip, l - 150 mm.
+
+    Whether the last bits of the sum change their sign at the tip does not count: 0.25 l_n had
+    stood there by chance, a fourth of the length.
+    """
+    for spans, kinds, root, side in (
+        ((6000.0, tip), ("simple", "simple", "free"), 2, "right"),
+        ((tip, 6000.0), ("free", "simple", "simple"), 2, "left"),
+    ):
+        beam = Beam(
+            tuple(Span(length, 1e14) for length in spans),
+            tuple(Support(kind, 0.0 if kind == "free" else 300.0) for kind in kinds),  # type: ignore[arg-type]
+        )
+        out = 1 + spans.index(tip)
+        loads = [*uniform(spans, 17.3, 7.9), PointLoad("D", out, 48e3, 0.37 * tip)]
+        hog = beside_hog(Forces.of(beam, loads), root, side)  # type: ignore[arg-type]
+        assert hog.where == "free end"
+        assert hog.zero is not None
+        sheet = new_sheet(CHECKED)
+        with sheet.part("between", "Between places"):
+            record_length(place(sheet), hog)
+        # Both places are rounded to whole mm.
+        assert sheet.entry("between/l_vf").value == pytest.approx(tip - 150, abs=1.0)
 
 
 def test_lengths_as_lines() -> None:

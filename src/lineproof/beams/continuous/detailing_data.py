@@ -186,10 +186,10 @@ class Designed:
 
     @cached_property
     def shear_table(self) -> tuple[Floats, Floats, Floats]:
-        """Start, end and resistance of the stirrups of all stretches, as arrays."""
-        rows = [(s.start, s.end, s.V_s) for s in self.shear]
-        start, end, V_s = np.array(rows, dtype=float).reshape(-1, 3).T.copy()
-        return start, end, V_s
+        """Start and end of all stretches, and their rank, as arrays: the weakest stirrups first."""
+        rows = [(s.start, s.end, s.V_s, s.V_r) for s in self.shear]
+        start, end, V_s, V_r = np.array(rows, dtype=float).reshape(-1, 4).T.copy()
+        return start, end, np.lexsort((V_r, V_s)).argsort().astype(float)
 
     def cantilever(self, span: int) -> bool:
         """Whether a span is a cantilever."""

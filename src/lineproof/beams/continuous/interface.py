@@ -20,6 +20,9 @@ NOT_COVERED = {"check": "Shear between flange and web", "clause": "11.5"}
 """What is said where the bars of the slab are not given."""
 LEAST_SPACING, MOST_SPACING = 50.0, 500.0
 """Spacing of bars of the slab [mm]: closer ones leave no way for concrete, wider ones act apart."""
+_FOUND = "found along the span"
+_LAST_BIT = 1e-6
+"""Distance [mm] that is not rounded down to a whole mm: 2799.999999 is 2800."""
 _SLAB_BARS = re.compile(
     r"\s*(?:(?P<layers>[12])\s*x\s*)?(?P<size>\d\dM)\s+at\s+(?P<spacing>.+?)\s*\Z", re.IGNORECASE
 )
@@ -73,14 +76,14 @@ def read_slab_bars(name: str, text: object) -> SlabBars:
 class Beside:
     """The largest moment of a load case and its zero beside it, from the left axis [mm].
 
-    ``zero`` is None where the moment is zero nowhere in the span; ``at_face`` where it is taken as
-    zero at the face of a support, since it does not change its sign before.
+    ``zero`` is None where the moment is zero nowhere in the span; ``where`` tells how it was found:
+    at the face of a support it is taken as zero, where the moment does not change its sign before.
     """
 
     at: float
     zero: float | None
     case: str
-    at_face: bool = False
+    where: str = _FOUND
 
 
 def beside_sag(forces: Forces, span: int) -> Beside:
@@ -98,17 +101,30 @@ def beside_sag(forces: Forces, span: int) -> Beside:
     if not found:
         raise UserError(f"span {span}: its largest moment has no length beside it")
     zero = min(found, key=lambda x: abs(most.x - x))
-    return Beside(most.x, zero, str(most.case), zero in faces)
+    where = "face of the support" if zero in faces else _FOUND
+    return Beside(most.x, zero, str(most.case), where)
 
 
 def beside_hog(forces: Forces, support: int, side: End) -> Beside:
-    """Return the largest moment of a face of a support and the nearest place of zero moment."""
+    """Return the largest moment of a face of a support and the nearest place of zero moment.
+
+    At a free end the moment is zero, whatever the last bits of its sum say.
+    """
     demand = forces.hog(support, side)
     zeros = forces.solved.solution.span(demand.span).inflections(demand.row)
     start, end = forces.beam.faces(demand.span)
-    inside = [float(x) for x in zeros if start < x < end]
-    zero = min(inside, key=lambda x: abs(x - demand.x), default=None)
-    return Beside(demand.x, zero, str(demand.case))
+    free = _free_end(forces, demand.span)
+    inside = [float(x) for x in zeros if start < x < end and (free is None or abs(x - free) >= 1)]
+    zero = min(inside, key=lambda x: abs(x - demand.x), default=free)
+    where = "free end" if zero is not None and zero == free else _FOUND
+    return Beside(demand.x, zero, str(demand.case), where)
+
+
+def _free_end(forces: Forces, span: int) -> float | None:
+    """Return where a span ends free, from its left axis [mm]."""
+    left, right = forces.beam.supports[span - 1 : span + 1]
+    length = forces.beam.spans[span - 1].length
+    return 0.0 if left.kind == "free" else length if right.kind == "free" else None
 
 
 def record_length(steps: Steps, beside: Beside) -> None:
@@ -122,11 +138,11 @@ def record_length(steps: Steps, beside: Beside) -> None:
         steps.line(interface.LENGTH_QUARTER)
         return
     at = float(round(beside.at))
-    zero = math.floor(beside.zero) if beside.zero > at else math.ceil(beside.zero)
-    what = "face of the support" if beside.at_face else "found along the span"
+    bit = _LAST_BIT if beside.zero > at else -_LAST_BIT
+    zero = math.floor(beside.zero + bit) if beside.zero > at else math.ceil(beside.zero + bit)
     steps.bind(
         x_vm=sheet.given("x_vm", f"{at:.12g} mm", source=f"found along the span, {beside.case}"),
-        x_vz=sheet.given("x_vz", f"{zero:.12g} mm", source=f"{what}, {beside.case}"),
+        x_vz=sheet.given("x_vz", f"{zero:.12g} mm", source=f"{beside.where}, {beside.case}"),
     )
     steps.line(interface.LENGTH)
 

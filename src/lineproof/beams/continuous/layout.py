@@ -20,6 +20,8 @@ Face = Literal["bottom", "top"]
 Hook = Literal["", "90", "180"]
 Carrier = Literal["column", "girder", "wall", "none"]
 """What stands below a support; ``none`` at a free end."""
+SAME_PLACE = 1e-6
+"""Distance [mm] up to which a station is where two stretches meet: no last bit decides which."""
 
 
 @dataclass(frozen=True, slots=True)

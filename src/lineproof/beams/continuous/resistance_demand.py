@@ -18,7 +18,7 @@ from lineproof.beams.analysis.curves import Floats
 from lineproof.beams.continuous.anchorage import value
 from lineproof.beams.continuous.detailing_data import THETA, Designed, ShearStretch
 from lineproof.beams.continuous.forces import ENDS, Demand, End
-from lineproof.beams.continuous.layout import Face
+from lineproof.beams.continuous.layout import SAME_PLACE, Face
 from lineproof.beams.continuous.resistance import area_for, section_depth, shear_depth, yield_force
 from lineproof.standards.a23_3 import shear_bars, torsion
 
@@ -96,21 +96,22 @@ class SpanDemand:
 
 def stretch_at(designed: Designed, x: float) -> ShearStretch:
     """Return the shear resistance at a place: where stretches meet, the weaker."""
-    start, end, _ = designed.shear_table
-    met = [designed.shear[n] for n in np.flatnonzero((start <= x) & (x <= end))]
-    return min(met, key=lambda s: s.V_s, default=NO_SHEAR)
+    start, end, rank = designed.shear_table
+    met = np.flatnonzero((start - SAME_PLACE <= x) & (x <= end + SAME_PLACE))
+    return designed.shear[met[rank[met].argmin()]] if len(met) else NO_SHEAR
 
 
 def stretches_at(designed: Designed, x: Floats) -> list[ShearStretch]:
     """Return :func:`stretch_at` of many places at once."""
     if not len(x):
         return []
-    start, end, V_s = designed.shear_table
+    start, end, rank = designed.shear_table
+    start, end = start - SAME_PLACE, end + SAME_PLACE
     near = np.flatnonzero((start <= x.max()) & (x.min() <= end))
     if not len(near):
         return [NO_SHEAR] * len(x)
     met = (start[near] <= x[:, None]) & (x[:, None] <= end[near])
-    weakest = np.where(met, V_s[near], np.inf).argmin(axis=1)
+    weakest = np.where(met, rank[near], np.inf).argmin(axis=1)
     found = met[np.arange(len(x)), weakest]
     return [
         designed.shear[n] if there else NO_SHEAR

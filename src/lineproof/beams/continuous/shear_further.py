@@ -10,6 +10,9 @@ from lineproof.beams.continuous.shear_sections import ShearSection, section_at
 from lineproof.beams.continuous.torsion_record import section_of_torsion
 from lineproof.record import Entry
 
+_NEAR = 1e-3
+"""Distance [mm] up to which two sections stand at one place."""
+
 
 def record_further(design: Design, span: int, at: tuple[int, int], key: str) -> Mapping[str, Entry]:
     """Return the entries of the section of a case and column, recorded in a part if not yet.
@@ -32,4 +35,11 @@ def record_further(design: Design, span: int, at: tuple[int, int], key: str) -> 
 
 
 def _same(one: ShearSection, other: ShearSection) -> bool:
-    return (one.demand, one.place) == (other.demand, other.place)
+    """Tell whether two sections are of one case and place, at the same depth and bars.
+
+    A station may stand at the face, but for the last bits of both.
+    """
+    alike = (one.demand.row, one.d, one.A_s, one.A_sp) == (
+        other.demand.row, other.d, other.A_s, other.A_sp,
+    )  # fmt: skip
+    return alike and abs(one.demand.x - other.demand.x) < _NEAR

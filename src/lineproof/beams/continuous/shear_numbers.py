@@ -13,6 +13,7 @@ from typing import Literal
 import numpy as np
 
 from lineproof.beams.analysis.curves import Floats
+from lineproof.beams.continuous.layout import SAME_PLACE
 from lineproof.beams.continuous.torsion import SpanTorsion
 from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import shear_factors
@@ -123,10 +124,10 @@ def area_at(bars: Sequence[Stretch], x: Floats) -> Floats:
     The stretches stand in order from left to right and do not overlap.
     """
     start, end, area, _ = _table(bars)
-    at = np.clip(np.searchsorted(start, x, side="right") - 1, 0, None)
+    at = np.clip(np.searchsorted(start, x + SAME_PLACE, side="right") - 1, 0, None)
     found = np.full(np.shape(x), np.inf)
     for n in (at, np.maximum(at - 1, 0)):
-        inside = (x >= start[n]) & (x <= end[n])
+        inside = (x >= start[n] - SAME_PLACE) & (x <= end[n] + SAME_PLACE)
         found = np.where(inside, np.minimum(found, area[n]), found)
     return np.where(np.isinf(found), 0.0, found)
 
@@ -134,7 +135,7 @@ def area_at(bars: Sequence[Stretch], x: Floats) -> Floats:
 def depth_at(bars: Sequence[Stretch], x: Floats) -> Floats:
     """Return the depth to the bars of a face at stations; outside them that of the nearest."""
     start, end, _, depth = _table(bars)
-    at = np.clip(np.searchsorted(start, x, side="right") - 1, 0, None)
+    at = np.clip(np.searchsorted(start, x + SAME_PLACE, side="right") - 1, 0, None)
     after = np.minimum(at + 1, len(start) - 1)
     nearer_after = (x > end[at]) & (start[after] - x < x - end[at])
     made: Floats = np.where(nearer_after & (after > at), depth[after], depth[at])
