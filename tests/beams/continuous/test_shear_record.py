@@ -171,6 +171,10 @@ def test_bars_count_where_they_stand() -> None:
     one = (Stretch(0, 1000, 2000, 560),)
     assert area_at(one, np.array([1000.0, 1001.0])).tolist() == [2000, 0]
     assert depth_at(one, np.array([5000.0])).tolist() == [560]
+    # The last bits of a place, such as a sum of spans, decide nothing.
+    near = np.array([1000 - 1e-9, 1000 + 1e-9, 2000 + 1e-9, 2600 - 1e-9])
+    assert area_at(bars, near).tolist() == [1000, 1000, 1000, 500]
+    assert depth_at(bars, near).tolist() == [550, 550, 550, 540]
 
 
 def test_stirrups_as_given_fail_their_check() -> None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+import numpy as np
 import pytest
 
 from lineproof.beams.bars import BarLayer
@@ -12,6 +13,7 @@ from lineproof.beams.continuous.detailing_data import SectionBars, ShearStretch,
 from lineproof.beams.continuous.detailing_meeting import Reach, allowed
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import stand
+from lineproof.beams.continuous.resistance_demand import NO_SHEAR, stretch_at, stretches_at
 from lineproof.beams.continuous.shear_stretches import (
     BarsOver,
     bars_over,
@@ -127,6 +129,20 @@ def test_the_weaker_of_two_divisions_at_each_place() -> None:
         (5000, 6000, 250, 150, first[1].theta),
     ]  # fmt: skip
     assert weaker_of((), second) == tuple(second)
+
+
+def test_where_stretches_meet_the_weaker_counts_whatever_the_last_bits() -> None:
+    """Stirrups of 100 kN up to 4 m, of 150 kN behind; with the same stirrups the lower V_r."""
+    bare = beam_of((7000.0,), ("simple", "simple"), D=20.0, L=10.0)
+    weak, strong = ShearStretch(0, 4000, 200.0, 100.0), ShearStretch(4000, 7000, 250.0, 150.0)
+    alike = ShearStretch(4000, 7000, 190.0, 100.0)
+    places = [4000 - 1e-9, 4000.0, 4000 + 1e-9]
+    for other, expected in ((strong, weak), (alike, alike)):
+        designed = replace(bare, shear=(weak, other))
+        assert [stretch_at(designed, x) for x in places] == [expected] * 3
+        assert stretches_at(designed, np.array(places)) == [expected] * 3
+        assert stretch_at(designed, 4001.0) == other
+    assert stretch_at(replace(bare, shear=(weak,)), 4001.0) == NO_SHEAR
 
 
 def test_bars_made_longer_end_where_a_tension_zone_allows_it() -> None:
