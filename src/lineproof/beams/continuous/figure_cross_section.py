@@ -39,6 +39,8 @@ TALLEST = 48.0
 REACH = 8.0
 """From the face of the web to the names of bars, mm on paper."""
 BELOW = 16.0
+NOTE = 2.6
+"""Height of the note under a section, mm on paper."""
 LINE, CLOSEST = 4.6, 3.5
 """From one name of bars to the next, and where there is little room."""
 UNDER = 4.5
@@ -80,48 +82,68 @@ def section_at(
     flange = overhang_circles(steel, shape, shown)
     sides = side_circles(steel)
     left, right = _names(steel, circles, flange, sides, all_left=shape.kind == "rectangle")
-    first = 7.0
-    if right:
-        first = REACH + max(text_width(name.runs, TEXT_SIZE) for name in right) + 4.0
-    first = max(first, shown.right * shown.scale + 6.0)
-    drawn = [circle for _, circle in (*circles, *flange, *sides)]
-    lowest = min(
-        _heights(shape, shown, len(left), -1.0)[0], _heights(shape, shown, len(right), 1.0)[0]
-    )
-    below = max(BELOW, 8.0 - lowest * shown.scale)
+    note = f"At {x:.0f} mm from the axis of support 1. Scale 1 : {1 / shown.scale:g}"
+    note += ", flange shortened." if shown.shortened else "."
+    sheet = _paper(shape, shown, left, right, text_width(words(note), NOTE) + 2.0)
+    under = ((sheet.width / 2 - sheet.margin) / shown.scale, (3.0 - sheet.below) / shown.scale)
     shapes: list[Shape] = [
         *outline(shape, shown, goes_on=True),
         *stirrup_shapes(steel),
-        *drawn,
-        *_dimensions(shape, shown, steel, first, tension, [circle for _, circle in circles]),
+        *(circle for _, circle in (*circles, *flange, *sides)),
+        *_dimensions(shape, shown, steel, sheet.first, tension, [c for _, c in circles]),
         *_callouts(shape, shown, left, way=-1.0),
         *_callouts(shape, shown, right, way=1.0),
+        Text(under, words(note), "text", NOTE),
     ]
-    thickness = _thickness_text(shape, shown) if shape.kind != "rectangle" else 0.0
-    beside = REACH + max((text_width(name.runs, TEXT_SIZE) for name in left), default=0.0) + 2.0
-    over = shown.left * shown.scale + FLANGE_OFFSET + thickness + 1.0 if shape.kind == "T" else 0.0
-    margin = max(beside, over)
-    past = NEXT + thickness + 1.0 if shape.kind == "L" else 0.0
-    width = margin + shape.b_w * shown.scale + first + NEXT + max(past, 5.5)
     name = title or f"Section {letter}".strip()
-    note = f"At {x:.0f} mm from the axis of support 1. Scale 1 : {1 / shown.scale:g}"
-    note += ", flange shortened." if shown.shortened else "."
-    needed = text_width(words(note), 2.6) + 2.0
-    if needed > width:
-        margin += (needed - width) / 2
-        width = needed
-    at_note = ((width / 2 - margin) / shown.scale, (3.0 - below) / shown.scale)
-    shapes.append(Text(at_note, words(note), "text", 2.6))
-    above = 12.0 if shape.kind != "rectangle" else 5.0
     return Figure(
-        round(width, 1),
-        round(shape.h * shown.scale + below + above, 1),
+        round(sheet.width, 1),
+        round(shape.h * shown.scale + sheet.below + sheet.above, 1),
         shown.scale,
-        (round(margin, 3), round(below, 3)),
+        (round(sheet.margin, 3), round(sheet.below, 3)),
         tuple(shapes),
         _alt(name, x, shape, steel),
         name,
     )
+
+
+@dataclass(frozen=True, slots=True)
+class _Paper:
+    """Room around the web, mm on paper: left of it, below the soffit, above the top.
+
+    ``first`` is from the web to the first dimension line right of it, ``width`` that of the figure.
+    """
+
+    margin: float
+    width: float
+    first: float
+    below: float
+    above: float
+
+
+def _paper(
+    shape: SectionShape, shown: Shown, left: Sequence[Named], right: Sequence[Named], note: float
+) -> _Paper:
+    """Return the room for names, dimensions and the note under them, which is ``note`` wide."""
+    first = REACH + _widest(right) + 4.0 if right else 7.0
+    first = max(first, shown.right * shown.scale + 6.0)
+    thickness = _thickness_text(shape, shown) if shape.kind != "rectangle" else 0.0
+    over = shown.left * shown.scale + FLANGE_OFFSET + thickness + 1.0 if shape.kind == "T" else 0.0
+    margin = max(REACH + _widest(left) + 2.0, over)
+    past = NEXT + thickness + 1.0 if shape.kind == "L" else 0.0
+    width = margin + shape.b_w * shown.scale + first + NEXT + max(past, 5.5)
+    margin += max(note - width, 0.0) / 2
+    lowest = min(
+        _heights(shape, shown, len(left), -1.0)[0], _heights(shape, shown, len(right), 1.0)[0]
+    )
+    below = max(BELOW, 8.0 - lowest * shown.scale)
+    return _Paper(
+        margin, max(width, note), first, below, 5.0 if shape.kind == "rectangle" else 12.0
+    )
+
+
+def _widest(names: Sequence[Named]) -> float:
+    return max((text_width(name.runs, TEXT_SIZE) for name in names), default=0.0)
 
 
 def sections_of(
