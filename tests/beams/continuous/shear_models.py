@@ -18,7 +18,8 @@ from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd, SpanNumbers, Stretch
 from lineproof.beams.continuous.shear_record import record_place, record_section
 from lineproof.beams.continuous.shear_sections import ShearSection
-from lineproof.beams.continuous.stirrups_choice import Choice
+from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups
+from lineproof.beams.continuous.stirrups_given import read_stirrups
 from lineproof.beams.continuous.stirrups_record import record_stirrups
 from lineproof.beams.steps import Steps
 from lineproof.record import Entry, Record
@@ -78,6 +79,13 @@ def case_of(
         for k, length in enumerate(lengths, start=1)
     )  # fmt: skip
     return Case(Forces.of(beam, loads, combinations), outline, spans)
+
+
+def check_zones(case: Case, basis: ShearBasis, zones: object) -> Choice:
+    """Check stirrups as they are typed, zone by zone."""
+    clear = {numbers.span: case.forces.beam.clear(numbers.span) for numbers in case.spans}
+    given = read_stirrups("stirrups", zones, clear, basis.stirrup)
+    return check_stirrups(case.outline, case.forces, basis, case.spans, given)
 
 
 def three_spans(dead: float = 30.0, live: float = 25.0) -> Case:

@@ -11,11 +11,12 @@ import pytest
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.detailing import lay_bars
-from lineproof.beams.continuous.detailing_given import beside_gap, read_given_runs, section_bars_of
+from lineproof.beams.continuous.detailing_given import beside_gap, check_layers, section_bars_of
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance_cover import covered
+from lineproof.beams.continuous.typed_runs import read_runs
 from lineproof.errors import UserError
-from lineproof.standards.codes import code_pair
+from lineproof.standards.codes import CodePair, code_pair
 
 from .laid import PAIR_19, PAIR_24, beam_of, three_spans
 
@@ -30,8 +31,15 @@ def row(**changes: Any) -> Row:
     return GOOD | changes
 
 
+def given_runs(rows: list[Row], pair: CodePair = PAIR) -> tuple[BarRun, ...]:
+    """Read rows for the one span and check its layers."""
+    runs = read_runs("bar_runs", rows, BASIS.outline, pair)
+    check_layers(runs, BASIS)
+    return runs
+
+
 def test_a_row_is_read() -> None:
-    (run,) = read_given_runs([row(hook_start="90", serves="span 1")], BASIS, PAIR)
+    (run,) = given_runs([row(hook_start="90", serves="span 1")])
     assert run == BarRun("bottom", 1, 2, "25M", -150.0, 7150.0, hook_start="90", serves="span 1")
 
 
@@ -54,26 +62,26 @@ def test_a_row_is_read() -> None:
 )
 def test_bad_rows_say_what_to_write(changes: Row, words: str) -> None:
     with pytest.raises(UserError) as told:
-        read_given_runs([row(**changes)], BASIS, PAIR)
+        given_runs([row(**changes)])
     assert words in str(told.value)
 
 
 def test_all_faults_at_once() -> None:
     rows = [row(bars="x"), row(start="9 m", end="8 m"), {"face": "top"}]
     with pytest.raises(UserError) as told:
-        read_given_runs(rows, BASIS, PAIR)
+        given_runs(rows)
     text = "\n".join(told.value.faults)
     assert "bar run 1, bars" in text
     assert "bar run 2: starts at 9000 mm" in text
     assert "bar run 2, start: 9000 mm is outside" in text
     assert "bar run 3: bars is missing" in text
     with pytest.raises(UserError, match="none given"):
-        read_given_runs([], BASIS, PAIR)
+        given_runs([])
 
 
 def test_hooks_of_the_2024_edition_are_refused() -> None:
     with pytest.raises(UserError, match="write straight bars"):
-        read_given_runs([row(hook_start="90")], BASIS, code_pair(PAIR_24))
+        given_runs([row(hook_start="90")], code_pair(PAIR_24))
 
 
 def test_sections_are_read_from_the_runs() -> None:
@@ -85,10 +93,10 @@ def test_sections_are_read_from_the_runs() -> None:
 
 def test_two_sizes_stand_in_one_layer_and_three_are_refused() -> None:
     rows = [GOOD, row(bars="1-20M")]
-    runs = read_given_runs(rows, BASIS, PAIR)
+    runs = given_runs(rows)
     ((layer,),) = section_bars_of(runs, BASIS.outline, "15M", [3500.0]).bottom
     assert (str(layer), layer.count, layer.area) == ("2-25M + 1-20M", 3, 1300)
-    runs = read_given_runs([*rows, row(bars="1-15M")], BASIS, PAIR)
+    runs = given_runs([*rows, row(bars="1-15M")])
     with pytest.raises(UserError, match="25M, 20M, 15M stand in layer 1 of the bottom bars"):
         section_bars_of(runs, BASIS.outline, "15M", [3500.0])
 
@@ -99,9 +107,9 @@ def test_where_no_bars_stand_the_nearest_are_known() -> None:
     Also where the 20M are short, so that the middle of the 25M is further away.
     """
     short = row(bars="2-20M", start="4.2 m", end="5 m")
-    runs = read_given_runs([row(end="3 m"), short], BASIS, PAIR)
+    runs = given_runs([row(end="3 m"), short])
     assert beside_gap(runs, BASIS.outline, 1, 3500.0) == (BarLayer(2, "25M"),)
-    runs = read_given_runs([row(end="3 m"), row(bars="2-20M", start="4.2 m")], BASIS, PAIR)
+    runs = given_runs([row(end="3 m"), row(bars="2-20M", start="4.2 m")])
     assert section_bars_of(runs, BASIS.outline, "15M", [3500.0]).bottom == ((),)
     assert section_bars_of(runs, BASIS.outline, "15M", [2900.0]).bottom == ((BarLayer(2, "25M"),),)
     assert beside_gap(runs, BASIS.outline, 1, 3500.0) == (BarLayer(2, "25M"),)

@@ -26,9 +26,9 @@ REQUIRED = (
 P24: dict[str, Any] = {"codes": {"pair": "NBC 2025 + A23.3:24"}}
 
 
-def refused_at_start(**changes: Any) -> list[str]:
+def refused_at_start(*, project: Mapping[str, Any] = PROJECT, **changes: Any) -> list[str]:
     """Return the faults of inputs; nothing stands on the sheet."""
-    sheet = Sheet("B7", "Gallery floor beam", project=PROJECT)
+    sheet = Sheet("B7", "Gallery floor beam", project=project)
     with pytest.raises(UserError) as caught:
         start(sheet=sheet, **changes)
     assert sheet.parts == ()
@@ -176,8 +176,7 @@ def test_more_bars_than_fit() -> None:
 def test_bars_along_the_beam_that_cannot_stand() -> None:
     """A hook in mid-span, ends outside the beam, a face that is none: every fault at once."""
     matches(
-        refused_at(
-            "flexure",
+        refused_at_start(
             bar_runs=[
                 BOTTOM | {"end": "12 m", "hook_end": "90"},
                 BOTTOM | {"start": "13 m", "end": "32 m"},
@@ -198,8 +197,7 @@ def test_bars_along_the_beam_that_cannot_stand() -> None:
 def test_stirrups_closer_than_the_clear_space() -> None:
     """60 - 11.3 = 49 mm clear, 80 - 11.3 = 69 mm; a zone outside its span beside them."""
     matches(
-        refused_at(
-            "flexure",
+        refused_at_start(
             stirrups=[
                 {"span": 1, "spacing": "60 mm"},
                 {"span": 2, "spacing": "80 mm"},
@@ -261,7 +259,7 @@ def test_the_simplified_method_outside_its_limits() -> None:
 def test_hooks_to_the_edition_whose_rule_is_unknown() -> None:
     """A23.3:24 changed the hook: hooks given are refused with the reason."""
     matches(
-        refused_at("flexure", project=P24, bar_runs=[BOTTOM | {"hook_start": "90"}, TOP]),
+        refused_at_start(project=P24, bar_runs=[BOTTOM | {"hook_start": "90"}, TOP]),
         "bar run 1, hook_start: hooks cannot be calculated to CSA A23.3:24, whose expression is "
         "not known here; write straight bars",
     )
@@ -487,10 +485,31 @@ def test_supports_with_more_than_a_width_are_shown_how_to_write() -> None:
 
 def test_a_spacing_that_is_not_read_has_one_fault() -> None:
     matches(
-        refused_at("flexure", stirrups=[{"span": 1, "spacing": "150"}, {"span": "2"}]),
+        refused_at_start(stirrups=[{"span": 1, "spacing": "150"}, {"span": "2"}]),
         "stirrups, zone 1: spacing: '150' has no unit; write '150 mm'",
         "stirrups, zone 2: span '2' does not exist; write 2 without quotes",
     )
+
+
+def test_a_wrong_span_hides_no_fault_of_bars_and_stirrups_along_the_beam() -> None:
+    """What stands in a row is told at once; whether its places lie in the beam, once that is known.
+
+    The second zone has the size of another fault: 60 - 11.3 mm for the 10M that is usual.
+    """
+    matches(
+        refused_at_start(
+            spans=["7.6", "9.2 m", "7.6 m"], stirrup="9M",
+            bar_runs=[BOTTOM | {"bars": "five", "end": "90 m"}],
+            stirrups=[{"span": 4, "spacing": "200 mm"}, {"span": 1, "spacing": "60 mm"},
+                      {"span": 1, "spacing": "200 mm", "from": "5 m", "to": "3 m"}],
+        ),
+        "spans, span 1: '7.6' has no unit",
+        "stirrup: '9M'",
+        "bar run 1, bars: 'five' is not understood",
+        "stirrups, zone 1: span '4' does not exist; write one of 1, 2, 3",
+        "stirrups, zone 2: '60 mm' leaves 49 mm between 10M stirrups",
+        "stirrups, zone 3: from 5000 to 3000 mm is not inside the clear length of span 1; measure",
+    )  # fmt: skip
 
 
 def test_an_input_by_another_name_is_told_with_the_one_that_is_missing() -> None:

@@ -20,11 +20,11 @@ from lineproof.beams.continuous.shear_choice import RESERVE, Fitting, fit_layout
 from lineproof.beams.continuous.shear_numbers import ShearBasis
 from lineproof.beams.continuous.shear_state import STEP, SpanState, span_state
 from lineproof.beams.continuous.stirrups import grid, lay
-from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.beams.continuous.stirrups_choice import Choice, choose_stirrups
 from lineproof.errors import UserError
 
 from .flow import start
-from .shear_models import BASIS, Case, case_of, point, second, three_spans, uniform
+from .shear_models import BASIS, Case, case_of, check_zones, point, second, three_spans, uniform
 from .shear_search import assert_lightest
 
 METHODS = ("general", "simplified")
@@ -199,7 +199,7 @@ def test_closer_stirrups_are_never_used_more(method: str) -> None:
     before: list[Floats] = []
     for spacing in (350, 300, 200, 100):
         zones = [{"span": k, "spacing": f"{spacing} mm"} for k in (1, 2, 3)]
-        choice = check_stirrups(case.outline, case.forces, basis, case.spans, zones)
+        choice = check_zones(case, basis, zones)
         used = []
         for check in choice.checks:
             v = check.state.v

@@ -17,7 +17,7 @@ from lineproof.beams.continuous.shear_numbers import (
     depth_at,
 )
 from lineproof.beams.continuous.shear_sections import ShearSection
-from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.beams.continuous.stirrups_choice import Choice, choose_stirrups
 from lineproof.record import Record
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
@@ -25,6 +25,7 @@ from .shear_models import (
     BASIS,
     Case,
     case_of,
+    check_zones,
     new_sheet,
     point,
     record,
@@ -181,7 +182,7 @@ def test_stirrups_as_given_fail_their_check() -> None:
     """600 mm throughout: too far apart and too weak; the checks fail, nothing is refused."""
     case = three_spans()
     zones = [{"span": k, "spacing": "600 mm"} for k in (1, 2, 3)]
-    choice = check_stirrups(case.outline, case.forces, BASIS, case.spans, zones)
+    choice = check_zones(case, BASIS, zones)
     printed = record(new_sheet(BASIS), case, choice)
     assert not list(faults(printed.data))
     checks = entries(printed, "shear-2-left")
@@ -196,7 +197,7 @@ def test_without_stirrups_a_shallow_light_beam_holds_and_a_deep_one_fails() -> N
         case = case_of(
             (4000.0,), uniform((4000.0,), 15, 0), h=h, bottom=(2000.0, h - 50), top=(600.0, h - 50)
         )
-        choice = check_stirrups(case.outline, case.forces, BASIS, case.spans, [])
+        choice = check_zones(case, BASIS, [])
         printed = record(new_sheet(BASIS), case, choice)
         assert not list(faults(printed.data))
         checks = entries(printed, "shear-1-left")
@@ -210,8 +211,8 @@ def test_stirrups_below_the_minimum_do_not_count() -> None:
     """10M at 650 mm in a web of 380: the minimum is at 620 mm; V_c then is that without."""
     case = case_of((4000.0,), uniform((4000.0,), 15, 0))
     zone = [{"span": 1, "spacing": "650 mm"}]
-    with_them = check_stirrups(case.outline, case.forces, BASIS, case.spans, zone)
-    without = check_stirrups(case.outline, case.forces, BASIS, case.spans, [])
+    with_them = check_zones(case, BASIS, zone)
+    without = check_zones(case, BASIS, [])
     one, other = with_them.sections[0][0], without.sections[0][0]
     assert one.plain
     assert one.values["V_r"] == other.values["V_r"]
@@ -226,7 +227,7 @@ def test_beside_a_change_the_counted_spacing_is_printed() -> None:
         {"span": 2, "from": "600 mm", "to": "8000 mm", "spacing": "300 mm"},
         {"span": 2, "from": "8000 mm", "spacing": "150 mm"},
     ]  # fmt: skip
-    choice = check_stirrups(case.outline, case.forces, BASIS, case.spans, zones)
+    choice = check_zones(case, BASIS, zones)
     printed = record(new_sheet(BASIS), case, choice)
     assert not list(faults(printed.data))
     lines = entries(printed, "shear-2-left")

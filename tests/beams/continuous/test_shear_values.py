@@ -17,10 +17,10 @@ from lineproof.beams.continuous.shear_check import SpanCheck
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd
 from lineproof.beams.continuous.shear_state import span_state
 from lineproof.beams.continuous.stirrups import Band
-from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups
+from lineproof.beams.continuous.stirrups_choice import Choice
 
 from ..pocket import faults  # noqa: TID252 - one calculator for all tests of beams
-from .shear_models import CHECKED, DEAD_ONLY, Case, case_of, new_sheet, number, record
+from .shear_models import CHECKED, DEAD_ONLY, Case, case_of, check_zones, new_sheet, number, record
 
 X_V = 100 + 481.5
 """Critical section from the axis of a support 200 mm wide."""
@@ -43,9 +43,7 @@ def checked_beam() -> Case:
 def checked(basis: ShearBasis) -> Choice:
     """Return the beam with its 10M at 225 mm, as given."""
     case = checked_beam()
-    return check_stirrups(
-        case.outline, case.forces, basis, case.spans, [{"span": 1, "spacing": "225 mm"}]
-    )
+    return check_zones(case, basis, [{"span": 1, "spacing": "225 mm"}])
 
 
 @pytest.mark.parametrize("end", [0, -1])
@@ -94,7 +92,7 @@ def test_check_8b_without_stirrups(a_max: float, beta: float, V_r: float) -> Non
     0.65 x 230/1581.1 x sqrt(35) x 350 x 481.5 = 0.65 x 0.145468 x 5.91608 x 168.525 = 94.27 kN.
     """
     case, basis = checked_beam(), replace(CHECKED, method="simplified", a_max=a_max)
-    choice = check_stirrups(case.outline, case.forces, basis, case.spans, [])
+    choice = check_zones(case, basis, [])
     section = choice.sections[0][0]
     assert section.plain
     assert section.values["beta"] == pytest.approx(beta, abs=5e-5)

@@ -15,7 +15,7 @@ from typing import Any
 
 import pytest
 
-from lineproof.beams.continuous.cures_tried import row_of
+from lineproof.beams.continuous.layout import BarRun
 from lineproof.record import Record
 
 from .flow import record_of, run, start
@@ -26,6 +26,15 @@ DEEP: Mapping[str, Any] = {
     "h": "900 mm", "b_w": "400 mm",
     "loads": [{"type": "D", "span": 1, "line": "40 kN/m", "what": "facade"}],
 }  # fmt: skip
+
+
+def row_of(run: BarRun) -> dict[str, Any]:
+    """Return a run of bars as it is typed."""
+    return {
+        "face": run.face, "bars": f"{run.number}-{run.size}", "start": f"{run.start:.12g} mm",
+        "end": f"{run.end:.12g} mm", "layer": run.layer, "place": run.place,
+        "hook_start": run.hook_start, "hook_end": run.hook_end, "serves": run.serves,
+    }  # fmt: skip
 
 
 @pytest.fixture(scope="module")

@@ -12,17 +12,17 @@ from lineproof.beams.continuous.layout import StirrupZone, places_of
 from lineproof.beams.continuous.shear_choice import refuse_strained
 from lineproof.beams.continuous.shear_numbers import ShearBasis
 from lineproof.beams.continuous.stirrups import Band, first_distance, grid
-from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.beams.continuous.stirrups_choice import Choice, choose_stirrups
 from lineproof.beams.continuous.stirrups_given import SpanStirrups
 from lineproof.beams.continuous.stirrups_record import closest
 from lineproof.errors import UserError
 
-from .shear_models import BASIS, case_of, new_sheet, record, three_spans, uniform
+from .shear_models import BASIS, case_of, check_zones, new_sheet, record, three_spans, uniform
 
 
 def checked(*zones: Any, basis: ShearBasis = BASIS) -> Choice:
     case = three_spans()
-    return check_stirrups(case.outline, case.forces, basis, case.spans, list(zones))
+    return check_zones(case, basis, list(zones))
 
 
 @pytest.mark.parametrize(
@@ -68,7 +68,7 @@ def test_overlapping_zones_are_refused() -> None:
 def test_no_list_of_zones_is_refused() -> None:
     case = three_spans()
     with pytest.raises(UserError, match="is not a list of zones"):
-        check_stirrups(case.outline, case.forces, BASIS, case.spans, {"span": 1})  # type: ignore[arg-type]
+        check_zones(case, BASIS, {"span": 1})
 
 
 def test_no_space_is_wider_than_given() -> None:
@@ -98,7 +98,7 @@ def test_the_zones_chosen_pass_as_given() -> None:
          "spacing": f"{b.spacing} mm"}
         for c in choice.checks for b in c.bands
     ]  # fmt: skip
-    again = check_stirrups(case.outline, case.forces, BASIS, case.spans, zones)
+    again = check_zones(case, BASIS, zones)
     assert again.worst <= 1
     assert again.worst == pytest.approx(choice.worst, abs=2e-3)
     assert again.reasons[0] == "Span 1, 0.00 to 6.17 m: 350 mm, as given; used to 99 % at most."
@@ -134,7 +134,7 @@ def test_what_stirrups_cannot_cure_fails_where_they_are_given() -> None:
     """The same beam with stirrups as built is checked, and its printed check fails."""
     case = case_of((6000.0,), uniform((6000.0,), 60, 30), bottom=(400.0, 566.0))
     zone = [{"span": 1, "spacing": "150 mm"}]
-    choice = check_stirrups(case.outline, case.forces, BASIS, case.spans, zone)
+    choice = check_zones(case, BASIS, zone)
     assert choice.worst > 1
     made = record(new_sheet(BASIS), case, choice).data
     [failed] = [e for p in made["parts"] if p["key"] == "shear-1-left" for e in p["entries"]

@@ -16,7 +16,7 @@ from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.shear_numbers import ShearBasis, SpanEnd, SpanNumbers, Stretch
 from lineproof.beams.continuous.shear_sections import ShearSection
 from lineproof.beams.continuous.shear_state import span_state
-from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
+from lineproof.beams.continuous.stirrups_choice import Choice, choose_stirrups
 from lineproof.beams.continuous.torsion import SpanTorsion
 from lineproof.beams.continuous.torsion_record import record_span_torsion
 from lineproof.beams.steps import Steps
@@ -31,6 +31,7 @@ from .shear_models import (
     DEAD_ONLY,
     Case,
     case_of,
+    check_zones,
     new_sheet,
     record,
     uniform,
@@ -114,9 +115,7 @@ def test_independent_check_10() -> None:
     catalogue); here torsion first takes 2 x 0.258 x 225 = 116 of the 200 mm2.
     """
     case, basis = check_10()
-    choice = check_stirrups(
-        case.outline, case.forces, basis, case.spans, [{"span": 1, "spacing": "225 mm"}]
-    )
+    choice = check_zones(case, basis, [{"span": 1, "spacing": "225 mm"}])
     acting = case.spans[0].torsion
     assert acting is not None
     assert acting.values["T_cr"] == pytest.approx(33.92e6, abs=5e3)
@@ -236,7 +235,7 @@ def test_a_gap_without_stirrups_is_refused_where_torsion_counts() -> None:
     zones = [{"span": 1, "spacing": "150 mm"},
              {"span": 2, "from": "0 m", "to": "3 m", "spacing": "150 mm"}]  # fmt: skip
     with pytest.raises(UserError, match="span 2 has torsion that counts, but part of it"):
-        check_stirrups(case.outline, case.forces, CLOSED, case.spans, zones)
+        check_zones(case, CLOSED, zones)
 
 
 def test_torsion_halves_the_largest_spacing() -> None:

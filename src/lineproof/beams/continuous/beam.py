@@ -20,7 +20,6 @@ from lineproof.beams.continuous.cures_tried import (
     Tried,
     failing,
     failing_of,
-    row_of,
 )
 from lineproof.beams.continuous.deflections import (
     SERVICE,
@@ -111,7 +110,7 @@ class ContinuousBeam:
 
     def _with_bars(self, runs: Runs) -> Calculated:
         """Return the beam calculated with other bars along it; the sheet stays as it is."""
-        inputs = replace(self.inputs, bar_runs=tuple(row_of(run) for run in runs))
+        inputs = replace(self.inputs, bar_runs=tuple(replace(run, mark="") for run in runs))
         beam = ContinuousBeam(Trial(self.sheet), inputs, self.pair, cures=False)
         return Calculated(beam._chapters(), beam._gaps)
 
@@ -323,9 +322,7 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
 
 def _ties_unknown(inputs: ContinuousInputs) -> bool:
     """Tell whether hooks of a beam as built have so small a cover that they ask for ties."""
-    hooked = any(
-        row.get(end) for row in inputs.bar_runs or () for end in ("hook_start", "hook_end")
-    )
+    hooked = any(run.hook_start or run.hook_end for run in inputs.bar_runs or ())
     d_bs = BARS.number(inputs.stirrup, "d_b")
     c_top = numbers.value(hooks.FACE_COVER, {"c_c": inputs.cover.value, "d_bs": d_bs})
     return inputs.as_built and hooked and not numbers.holds(hooks.FACE_COVERED, {"c_top": c_top})

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass, field
-from typing import Any
 
 from lineproof.beams.continuous.deflection_service import DEFLECTION
 from lineproof.beams.continuous.layout import BarRun
@@ -37,15 +36,6 @@ def failing_of(parts: Iterable[Part]) -> Failing:
         if not part.key.startswith(COVERAGE)
         for check in failing(part)
     )
-
-
-def row_of(run: BarRun) -> dict[str, Any]:
-    """Return a run of bars as it is typed."""
-    return {
-        "face": run.face, "bars": f"{run.number}-{run.size}", "start": f"{run.start:.12g} mm",
-        "end": f"{run.end:.12g} mm", "layer": run.layer, "place": run.place,
-        "hook_start": run.hook_start, "hook_end": run.hook_end, "serves": run.serves,
-    }  # fmt: skip
 
 
 @dataclass(frozen=True, eq=False, slots=True)

@@ -11,7 +11,6 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
 from itertools import count
-from typing import Any
 
 from lineproof.beams.bars import BarLayer, BarLayers, TopBars, bars_text
 from lineproof.beams.continuous import faces, flexure_choice
@@ -38,7 +37,7 @@ from lineproof.beams.continuous.detailing_data import (
 from lineproof.beams.continuous.detailing_given import (
     beside_gap,
     bottom_places,
-    read_given_runs,
+    check_layers,
     section_bars_of,
     tail_cover,
     top_bars_at,
@@ -152,7 +151,7 @@ def design_of(model: Model, pair: CodePair) -> Design:
     """Return the design of a beam; raises :class:`UserError` where nothing can do."""
     outline = outline_of(model.sheet, model.inputs)
     basis = _basis(model, outline)
-    given = _given_runs(model, basis, pair)
+    given = _given_runs(model, basis)
     sections = _given_sections(model, pair, outline, given)
     asked = Asked()
     made = first = _designed(model, pair, basis, (given, *sections), asked, None)
@@ -315,9 +314,11 @@ def _breadths(model: Model) -> dict[int, float]:
     }
 
 
-def _given_runs(model: Model, basis: Basis, pair: CodePair) -> tuple[BarRun, ...] | None:
-    rows: Sequence[Mapping[str, Any]] | None = model.inputs.bar_runs
-    return None if rows is None else read_given_runs(rows, basis, pair)
+def _given_runs(model: Model, basis: Basis) -> tuple[BarRun, ...] | None:
+    runs = model.inputs.bar_runs
+    if runs is not None:
+        check_layers(runs, basis)
+    return runs
 
 
 def _given_sections(

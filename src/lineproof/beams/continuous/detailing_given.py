@@ -1,150 +1,35 @@
-"""Bars given along a beam, as built or as a designer wants them: read, and checked as a whole."""
+"""Bars given along a beam, as built or as a designer wants them: checked as a whole."""
 
 from __future__ import annotations
 
 import math
-import re
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import replace
 from itertools import pairwise
-from typing import Any, get_args
 
 from lineproof.beams.bars import BarLayer, BarLayers, layer_of
 from lineproof.beams.continuous.anchorage import Bar, clear_distance, holds, value
 from lineproof.beams.continuous.cutoff_ends import at_section, top_section
 from lineproof.beams.continuous.detailing_data import Basis, SectionBars, SupportTop
 from lineproof.beams.continuous.forces import Forces
-from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face
 from lineproof.beams.continuous.resistance import lap_pairs
-from lineproof.errors import FaultList, UserError
-from lineproof.quantity import echo, read_quantity
+from lineproof.beams.continuous.typed_runs import FACES, LAYERS
+from lineproof.errors import FaultList
 from lineproof.standards.a23_3 import bars as bar_clause
-from lineproof.standards.a23_3.bars import BARS
-from lineproof.standards.codes import CodePair
 
-KEYS = ("face", "bars", "start", "end", "layer", "place", "hook_start", "hook_end", "serves")
-NEEDED = ("face", "bars", "start", "end")
-FACES, HOOKS, PLACES = get_args(Face), get_args(Hook), ("web", "overhang", "side face")
-LAYERS = (1, 2)
 MOST_SIZES = 2
 """Sizes of bars that may stand in one layer."""
-EXAMPLE = (
-    "{'face': 'bottom', 'bars': '2-25M', 'start': '-0.15 m', 'end': '7.75 m'}, distances from the "
-    "axis of support 1"
-)
-_BARS = re.compile(r"\s*(\d{1,2})\s*-\s*(\d{2}M)\s*\Z", re.IGNORECASE)
 
 
-def read_given_runs(
-    rows: Sequence[Mapping[str, Any]], basis: Basis, pair: CodePair
-) -> tuple[BarRun, ...]:
-    """Read runs of bars and check them against the beam.
+def check_layers(runs: tuple[BarRun, ...], basis: Basis) -> None:
+    """Raise :class:`UserError` about every layer too full for the web.
 
-    A row is for example ``{"face": "bottom", "bars": "2-25M", "start": "-0.15 m", "end":
-    "7.75 m"}``, with ``layer`` 2, ``place`` ``overhang`` or ``side face`` (skin bars, half at each
-    face), ``hook_start`` or ``hook_end`` ``90`` where they apply. Distances run from the axis of
-    support 1. Raises :class:`UserError` with every fault. Whether the bars carry the moments is
-    for ``covered`` to say.
+    Whether the bars carry the moments is for ``covered`` to say.
     """
-    faults, made = FaultList(), []
-    if not rows:
-        faults.add(f"bar runs: none given; write for example {EXAMPLE}")
-    for number, row in enumerate(rows, start=1):
-        try:
-            made.append(_read_row(f"bar run {number}", row, basis.outline, pair))
-        except UserError as error:
-            faults.take(error)
-    faults.raise_if_any()
-    runs = tuple(made)
+    faults = FaultList()
     _check_layers(runs, basis, faults)
     faults.raise_if_any()
-    return runs
-
-
-def _read_row(name: str, row: Mapping[str, Any], outline: BeamOutline, pair: CodePair) -> BarRun:
-    faults = FaultList()
-    if not isinstance(row, Mapping):
-        raise UserError(f"{name}: {echo(row)} is not a run of bars; write for example {EXAMPLE}")
-    for key in row:
-        if key not in KEYS:
-            faults.add(f"{name}: {echo(key)} is not known; write one of {', '.join(KEYS)}")
-    for key in NEEDED:
-        if key not in row:
-            faults.add(f"{name}: {key} is missing; write for example {EXAMPLE}")
-    faults.raise_if_any()
-    face = _choice(f"{name}, face", row["face"], FACES, faults)
-    place = _choice(f"{name}, place", row.get("place", "web"), PLACES, faults)
-    layer = _choice(f"{name}, layer", row.get("layer", 1), LAYERS, faults)
-    hooks = [_choice(f"{name}, {key}", str(row.get(key, "")), HOOKS, faults)
-             for key in ("hook_start", "hook_end")]  # fmt: skip
-    match = _BARS.match(str(row["bars"]))
-    if match is None or match[2].upper() not in BARS.rows or int(match[1]) < 1:
-        again = ", a row for each size" if "+" in str(row["bars"]) else ""
-        faults.add(f"{name}, bars: {echo(row['bars'])} is not understood; write '2-25M'{again}")
-    ends = [_distance(f"{name}, {key}", row[key], faults) for key in ("start", "end")]
-    faults.raise_if_any()
-    assert match is not None  # noqa: S101 - refused above
-    run = BarRun(
-        face, layer, int(match[1]), match[2].upper(), ends[0], ends[1], place, hooks[0], hooks[1],
-        str(row.get("serves", "")),
-    )  # fmt: skip
-    _check_ends(name, run, outline, pair, faults)
-    faults.raise_if_any()
-    return run
-
-
-def _choice(name: str, given: Any, known: Sequence[Any], faults: FaultList) -> Any:
-    if given not in known:
-        shown = ", ".join(repr(item) for item in known)
-        faults.add(f"{name}: {echo(given)}; write one of {shown}")
-    return given
-
-
-def _distance(name: str, given: Any, faults: FaultList) -> float:
-    try:
-        return read_quantity(name, given, "mm").value
-    except UserError as error:
-        faults.take(error)
-        return 0.0
-
-
-def _check_ends(
-    name: str, run: BarRun, outline: BeamOutline, pair: CodePair, faults: FaultList
-) -> None:
-    low, high = outline.ends
-    if run.start >= run.end:
-        faults.add(
-            f"{name}: starts at {run.start:g} mm and ends at {run.end:g} mm; write start below end"
-        )
-    for key, x in (("start", run.start), ("end", run.end)):
-        if not low <= x <= high:
-            faults.add(
-                f"{name}, {key}: {x:g} mm is outside the beam, which goes from {low:g} to "
-                f"{high:g} mm; write a distance from the axis of support 1 inside it"
-            )
-    for key, hook, x in (
-        ("hook_start", run.hook_start, run.start), ("hook_end", run.hook_end, run.end),
-    ):  # fmt: skip
-        if hook and not _at_end(outline, key, x):
-            faults.add(
-                f"{name}, {key}: the bars end at {x:g} mm, not at an end support or a free end; "
-                f"write {key}='' or end the bars there"
-            )
-        if hook and pair.concrete == "CSA A23.3:24":
-            faults.add(
-                f"{name}, {key}: hooks cannot be calculated to {pair.concrete}, whose expression "
-                "is not known here; write straight bars"
-            )
-    if run.place == "overhang" and (run.face == "bottom" or not outline.h_f):
-        faults.add(f"{name}, place: there is no slab beside the {run.face} bars; write 'web'")
-
-
-def _at_end(outline: BeamOutline, key: str, x: float) -> bool:
-    """Tell whether a hook stands in the end support of its side, or at a free end."""
-    last = key == "hook_end"
-    axis, support = outline.axes[-1 if last else 0], outline.supports[-1 if last else 0]
-    reach = support.half if support.kind != "free" else outline.depths[-1 if last else 0]
-    return abs(x - axis) <= reach
 
 
 def _places(runs: Iterable[BarRun], outline: BeamOutline) -> list[float]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
@@ -21,10 +22,13 @@ from lineproof.beams.continuous.inputs_together import (
     check_unit_weight,
 )
 from lineproof.beams.continuous.interface import SlabBars, read_slab_bars
+from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.shear_numbers import METHODS
+from lineproof.beams.continuous.stirrups_given import SpanStirrups, read_stirrups
 from lineproof.beams.continuous.typed_beam import (
     TypedLoad,
     TypedSupport,
+    outline_of_typed,
     read_depths,
     read_list,
     read_loads,
@@ -32,6 +36,7 @@ from lineproof.beams.continuous.typed_beam import (
     read_supports,
     spans_counted,
 )
+from lineproof.beams.continuous.typed_runs import read_runs
 from lineproof.beams.continuous.typed_torques import KINDS_OF_TORSION, read_torques
 from lineproof.beams.inputs import (
     MINIMUM_RULES,
@@ -65,6 +70,8 @@ AREA = Range("kPa", 0, 100, 1.8, zero=True)
 SHARE = Range("", 0, 1, 0.25, zero=True)
 UNIT_WEIGHT = Range("kN/m3", 10, 30, 24)
 LEAST_LEGS, MOST_LEGS = 2, 6
+USUAL_STIRRUP = "10M"
+"""By which zones are looked at whose size is not understood."""
 
 
 @dataclass(frozen=True)
@@ -110,8 +117,8 @@ class ContinuousInputs:
     redistribution: Mapping[int, float]
     stirrup_legs: int
     closed_stirrups: bool
-    stirrups: tuple[Mapping[str, Any], ...] | None
-    bar_runs: tuple[Mapping[str, Any], ...] | None
+    stirrups: Mapping[int, SpanStirrups] | None
+    bar_runs: tuple[BarRun, ...] | None
     torques: Mapping[str, Typed]
     torsion: str
     slab_bars: SlabBars | None
@@ -159,6 +166,7 @@ def read_inputs(
     reader.take("web_openings", no_openings)
     if count := len(spans) or spans_counted(given["spans"]):
         fields |= _read_by_span(reader, given, spans, count)
+        fields |= _read_laid(reader, fields, pair, count)
     fields["forces_file"] = reader.take("forces_csv", read_forces_file, given, fields)
     _check_together(fields, given, reader.faults)
     reader.faults.raise_if_any()
@@ -193,8 +201,6 @@ def _read_alone(reader: InputReader) -> dict[str, Any]:
         "attached_after": take("attached_after", row_of, DURATIONS),
         "stirrup_legs": take("stirrup_legs", _read_legs),
         "closed_stirrups": take("closed_stirrups", yes_or_no),
-        "stirrups": some("stirrups", _read_rows),
-        "bar_runs": some("bar_runs", _read_rows),
         "torques": some("torques", read_torques) or {},
         "torsion": take("torsion", one_of, KINDS_OF_TORSION),
         "slab_bars": some("slab_bars", read_slab_bars),
@@ -216,6 +222,23 @@ def _read_by_span(
         "redistribution": take("redistribution", _read_redistribution) or {},
         "bottom_bars": take("bottom_bars", _read_bar_list, count, "span", read_bars),
         "top_bars": take("top_bars", _read_bar_list, count + 1, "support", read_one_layer),
+    }
+
+
+def _read_laid(
+    reader: InputReader, fields: Mapping[str, Any], pair: CodePair | None, count: int
+) -> dict[str, Any]:
+    """Read bars and stirrups along the beam; their places only where the beam itself is sound."""
+    outline, some = outline_of_typed(fields), reader.take_if_given
+    clear = dict.fromkeys(range(1, count + 1), math.inf)
+    if outline is not None:
+        halves = [support.half for support in outline.supports]
+        for k, length in enumerate(outline.lengths, start=1):
+            clear[k] = length - halves[k] - halves[k - 1]
+    stirrup = fields["stirrup"] or USUAL_STIRRUP
+    return {
+        "bar_runs": some("bar_runs", read_runs, outline, pair),
+        "stirrups": some("stirrups", read_stirrups, clear, stirrup),
     }
 
 
@@ -243,16 +266,6 @@ def _read_legs(name: str, given: object) -> int:
         told = bare_number(given) or f"{LEAST_LEGS} to {MOST_LEGS}"
         raise UserError(f"{name}: {echo(given)}; write {told}")
     return given
-
-
-def _read_rows(name: str, given: object) -> tuple[Mapping[str, Any], ...]:
-    rows = read_list(name, given)
-    faults = FaultList()
-    for number, row in enumerate(rows, start=1):
-        if not isinstance(row, Mapping):
-            faults.add(f"{name}, {number}: {echo(row)} is not understood; write {{'...': ...}}")
-    faults.raise_if_any()
-    return tuple(rows)
 
 
 def _read_redistribution(name: str, given: object) -> dict[int, float]:

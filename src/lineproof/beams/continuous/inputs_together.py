@@ -66,7 +66,7 @@ def check_slab(fields: Mapping[str, Any], given: Mapping[str, Any], faults: Faul
 
 def check_bars_given(fields: Mapping[str, Any], faults: FaultList) -> None:
     """Refuse bars given twice, once by section and once along the beam."""
-    if fields["bar_runs"] is None:
+    if fields.get("bar_runs") is None:
         return
     for name, each in (("bottom_bars", "span"), ("top_bars", "support")):
         rows = fields.get(name) or ()

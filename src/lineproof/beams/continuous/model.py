@@ -26,9 +26,9 @@ from lineproof.beams.continuous.imported_forces import (
     imported_forces,
 )
 from lineproof.beams.continuous.inputs import ContinuousInputs
-from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport
+from lineproof.beams.continuous.layout import BeamOutline
 from lineproof.beams.continuous.symbols import KINDS, code
-from lineproof.beams.continuous.typed_beam import TypedLoad
+from lineproof.beams.continuous.typed_beam import TypedLoad, outline_of_typed
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 
@@ -222,24 +222,13 @@ def _imported(beam: Beam, file: ForcesFile) -> Forces:
 
 def outline_of(sheet: Sheet, inputs: ContinuousInputs) -> BeamOutline:
     """Return the concrete of the beam as it is built [mm]."""
-    b_w = inputs.b_w.value
     widths = tuple(
-        sheet.entry(f"{span_key(k)}/b_f").value if inputs.slab else b_w
+        sheet.entry(f"{span_key(k)}/b_f").value if inputs.slab else inputs.b_w.value
         for k in range(1, len(inputs.spans) + 1)
     )
-    return BeamOutline(
-        inputs.shape,
-        tuple(length.value for length in inputs.spans),
-        tuple(depth.value for depth in inputs.depths),
-        widths,
-        tuple(
-            BuiltSupport(0.0 if s.width is None else s.width.value, s.kind, s.carrier)
-            for s in inputs.supports
-        ),
-        b_w,
-        0.0 if inputs.h_f is None else inputs.h_f.value,
-        inputs.cover.value,
-    )
+    made = outline_of_typed(vars(inputs), widths)
+    assert made is not None  # noqa: S101 - checked inputs are whole
+    return made
 
 
 def near_support(span: int, end: End) -> int:

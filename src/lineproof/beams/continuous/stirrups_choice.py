@@ -6,7 +6,6 @@ import math
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from functools import cached_property
-from typing import Any
 
 import numpy as np
 
@@ -19,7 +18,7 @@ from lineproof.beams.continuous.shear_resistance import LEAST_AREA
 from lineproof.beams.continuous.shear_sections import ShearSection, sections
 from lineproof.beams.continuous.shear_state import SpanState, span_state
 from lineproof.beams.continuous.stirrups import GRID, Band, SpanLayout
-from lineproof.beams.continuous.stirrups_given import SpanStirrups, read_stirrups
+from lineproof.beams.continuous.stirrups_given import SpanStirrups
 from lineproof.errors import FaultList, UserError
 
 _WORDS = {"left": "left end", "middle": "middle", "right": "right end"}
@@ -85,24 +84,22 @@ def check_stirrups(
     forces: Forces,
     basis: ShearBasis,
     spans: Sequence[SpanNumbers],
-    given: Sequence[Mapping[str, Any]],
+    given: Mapping[int, SpanStirrups],
 ) -> Choice:
-    """Return stirrups as given, to be checked; an empty list is a beam without stirrups.
+    """Return stirrups as given by span, to be checked; there may be none.
 
-    Each item names its ``span`` and ``spacing``, and ``from`` and ``to`` measured from the face of
-    the left support, left out where the spacing holds up to the face. Raises :class:`UserError`
-    for zones that cannot be built; what does not carry is left to fail its check.
+    Raises :class:`UserError` for zones that cannot be built; what does not carry is left to fail
+    its check.
     """
     states = _states(forces, basis, spans)
     refuse_open(states)
-    made = read_stirrups(given, {s.numbers.span: s.faces[1] - s.faces[0] for s in states}, basis)
-    _refuse_gaps_with_torsion(states, made)
+    _refuse_gaps_with_torsion(states, given)
     checks: list[SpanCheck] = []
     zones: list[StirrupZone] = []
     reasons: list[str] = []
     for state in states:
         span = state.numbers.span
-        stirrups = made[span]
+        stirrups = given[span]
         zones += stirrups.placed(outline.faces(span)[0], _one(basis, span))
         check = _finer(state, stirrups.bands, forces)
         checks.append(check)

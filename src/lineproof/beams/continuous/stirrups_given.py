@@ -9,7 +9,6 @@ from itertools import pairwise
 from typing import Any
 
 from lineproof.beams.continuous.layout import StirrupZone
-from lineproof.beams.continuous.shear_numbers import ShearBasis
 from lineproof.beams.continuous.stirrups import (
     CLEAR_FOR_PLACING,
     FROM_FACE,
@@ -113,9 +112,9 @@ def _placed(
 
 
 def read_stirrups(
-    given: Sequence[Mapping[str, Any]], clear: Mapping[int, float], basis: ShearBasis
+    name: str, given: object, clear: Mapping[int, float], stirrup: str
 ) -> dict[int, SpanStirrups]:
-    """Read zones; ``clear`` is the clear length of every span [mm].
+    """Read zones; ``clear`` is the clear length of every span [mm], ``stirrup`` the size.
 
     Raises :class:`UserError` with every fault: what is missing, outside its span, overlapping, or
     closer than the clear space for placing.
@@ -123,10 +122,10 @@ def read_stirrups(
     faults = FaultList()
     rows: dict[int, list[Band]] = {span: [] for span in clear}
     if isinstance(given, str | Mapping) or not isinstance(given, Sequence):
-        raise UserError(f"stirrups: {echo(given)} is not a list of zones; write [{_EXAMPLE}]")
+        raise UserError(f"{name}: {echo(given)} is not a list of zones; write [{_EXAMPLE}]")
     for number, row in enumerate(given, start=1):
         try:
-            span, band = _read_zone(f"stirrups, zone {number}", row, clear, basis)
+            span, band = _read_zone(f"{name}, zone {number}", row, clear, stirrup)
             rows[span].append(band)
         except UserError as error:
             faults.take(error)
@@ -136,7 +135,7 @@ def read_stirrups(
         for one, other in pairwise(bands):
             if other.start < one.end - _NEAR:
                 faults.add(
-                    f"stirrups: span {span}: the zones from {one.start:g} to {one.end:g} mm and "
+                    f"{name}: span {span}: the zones from {one.start:g} to {one.end:g} mm and "
                     f"from {other.start:g} to {other.end:g} mm overlap; let one start where the "
                     "other ends"
                 )
@@ -146,7 +145,7 @@ def read_stirrups(
 
 
 def _read_zone(
-    name: str, row: object, clear: Mapping[int, float], basis: ShearBasis
+    name: str, row: object, clear: Mapping[int, float], stirrup: str
 ) -> tuple[int, Band]:
     if not isinstance(row, Mapping):
         raise UserError(f"{name}: {echo(row)} is not a zone; write {_EXAMPLE}")
@@ -164,11 +163,12 @@ def _read_zone(
         raise UserError(faults.faults)
     length = clear[span]
     start, end, s = _read_lengths(name, row, length, faults)
-    _check_spacing(name, row, s, basis, faults)
+    _check_spacing(name, row, s, stirrup, faults)
     if not -_NEAR <= start < end <= length + _NEAR:
+        known = f" of {length:g} mm" if math.isfinite(length) else ""
         faults.add(
-            f"{name}: from {start:g} to {end:g} mm is not inside the clear length of span {span} "
-            f"of {length:g} mm; measure from the face of its left support"
+            f"{name}: from {start:g} to {end:g} mm is not inside the clear length of span {span}"
+            f"{known}; measure from the face of its left support"
         )
     faults.raise_if_any()
     start = 0.0 if start <= FROM_FACE else start
@@ -191,8 +191,9 @@ def _read_lengths(
 
 
 def _check_spacing(
-    name: str, row: Mapping[str, Any], s: float, basis: ShearBasis, faults: FaultList
+    name: str, row: Mapping[str, Any], s: float, stirrup: str, faults: FaultList
 ) -> None:
+    d_bs = BARS.number(stirrup, "d_b")
     if not math.isfinite(s) and row.get("spacing") is not None:
         return  # not read: its fault is told
     if row.get("spacing") is None:
@@ -202,12 +203,12 @@ def _check_spacing(
             f"{name}: {echo(row['spacing'])} is more than {_WIDEST:g} mm; write for example "
             "'200 mm', and leave out a stretch without stirrups"
         )
-    elif s - basis.d_bs < CLEAR_FOR_PLACING:
+    elif s - d_bs < CLEAR_FOR_PLACING:
         faults.add(
-            f"{name}: {echo(row['spacing'])} leaves {s - basis.d_bs:.0f} mm between "
-            f"{basis.stirrup} stirrups, less than the {CLEAR_FOR_PLACING:g} mm for placing the "
+            f"{name}: {echo(row['spacing'])} leaves {s - d_bs:.0f} mm between "
+            f"{stirrup} stirrups, less than the {CLEAR_FOR_PLACING:g} mm for placing the "
             "concrete (common practice); write at least "
-            f"'{math.ceil(CLEAR_FOR_PLACING + basis.d_bs)} mm', thicker stirrups or more legs"
+            f"'{math.ceil(CLEAR_FOR_PLACING + d_bs)} mm', thicker stirrups or more legs"
         )
 
 

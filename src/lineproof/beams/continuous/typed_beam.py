@@ -9,7 +9,7 @@ from typing import Any, Literal
 
 from lineproof.beams.analysis.arrangements import LOAD_TYPES
 from lineproof.beams.analysis.model import FarEnd, SupportKind
-from lineproof.beams.continuous.layout import Carrier
+from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport, Carrier
 from lineproof.beams.inputs import Range, bare_number, read_in_range
 from lineproof.errors import FaultList, UserError
 from lineproof.quantity import Typed, echo
@@ -320,3 +320,29 @@ def _try(faults: FaultList, read: Callable[..., Any], *args: Any) -> Any:
     except UserError as error:
         faults.take(error)
         return None
+
+
+def outline_of_typed(
+    fields: Mapping[str, Any], widths: Sequence[float] | None = None
+) -> BeamOutline | None:
+    """Return the concrete of the beam as typed [mm], None as long as some of it is not known.
+
+    ``widths`` are those of the flange by span; without them that of the web.
+    """
+    needed = ("shape", "spans", "depths", "supports", "b_w", "cover")
+    if not all(fields.get(name) for name in needed):
+        return None
+    lengths, h_f = fields["spans"], fields["h_f"]
+    return BeamOutline(
+        fields["shape"],
+        tuple(length.value for length in lengths),
+        tuple(depth.value for depth in fields["depths"]),
+        tuple(widths or (fields["b_w"].value,) * len(lengths)),
+        tuple(
+            BuiltSupport(0.0 if s.width is None else s.width.value, s.kind, s.carrier)
+            for s in fields["supports"]
+        ),
+        fields["b_w"].value,
+        0.0 if h_f is None else h_f.value,
+        fields["cover"].value,
+    )
