@@ -14,6 +14,9 @@ from lineproof.errors import UserError
 from lineproof.quantity import echo
 from lineproof.standards.a23_3.bars import BARS
 
+_IMPERIAL = re.compile(r"#\s*\d|\bNo\.?\s*\d", re.IGNORECASE)
+"""Sizes in eighths of an inch."""
+_BUNDLE = re.compile(r"bundle", re.IGNORECASE)
 _GROUP = re.compile(r"\s*(\d{1,2})\s*-\s*([0-9A-Za-z]{1,6})\s*\Z")
 MOST_LAYERS = 2
 
@@ -188,7 +191,27 @@ def read_one_layer(name: str, text: object) -> BarLayers:
     return layers
 
 
+def refuse_other_bars(name: str, text: object) -> None:
+    """Raise :class:`UserError` about imperial and about bundled bars.
+
+    >>> refuse_other_bars("bottom_bars", "4-25M")
+    """
+    if _IMPERIAL.search(str(text)):
+        raise UserError(
+            f"{name}: {echo(text)} has imperial bars, which are outside the method: no size of CSA "
+            "G30.18 has both their area and their diameter; calculate them by hand, or write "
+            "metric bars such as '4-25M'"
+        )
+    if _BUNDLE.search(str(text)):
+        raise UserError(
+            f"{name}: {echo(text)} has bundled bars, which are outside the method (their clear "
+            "distance and development differ); write single bars, in two layers such as "
+            "'4-25M / 2-25M'"
+        )
+
+
 def _read_layer(name: str, text: object, group: str) -> BarLayer:
+    refuse_other_bars(name, text)
     match = _GROUP.match(group)
     if "+" in group:
         raise UserError(

@@ -491,6 +491,23 @@ def test_a_spacing_that_is_not_read_has_one_fault() -> None:
     )
 
 
+def test_imperial_and_bundled_bars_are_told_apart_from_slips() -> None:
+    """#8: 510 mm2 and 25.4 mm (ASTM A615); 25M: 500 mm2 and 25.2 mm. Neither stands in for both."""
+    matches(
+        refused_at_start(
+            bottom_bars=["4-#8", "4 No. 8", "4-25M in bundles of 2"], slab_bars="#4 at 12 in",
+            bar_runs=[BOTTOM | {"bars": "3-#8"}, BOTTOM | {"bars": "4-25M bundled", "layer": 3}],
+        ),
+        "slab_bars: '#4 at 12 in' has imperial bars, which are outside the method",
+        "bottom_bars, span 1: '4-#8' has imperial bars",
+        "bottom_bars, span 2: '4 No. 8' has imperial bars",
+        "bottom_bars, span 3: '4-25M in bundles of 2' has bundled bars, which are outside the",
+        "bar run 1, bars: '3-#8' has imperial bars, which are outside the method: no size of CSA",
+        "bar run 2, layer: '3'; write one of 1, 2",
+        "bar run 2, bars: '4-25M bundled' has bundled bars",
+    )  # fmt: skip
+
+
 def test_a_wrong_span_hides_no_fault_of_bars_and_stirrups_along_the_beam() -> None:
     """What stands in a row is told at once; whether its places lie in the beam, once that is known.
 

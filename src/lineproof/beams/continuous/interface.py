@@ -8,6 +8,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from lineproof.beams.bars import refuse_other_bars
 from lineproof.beams.continuous.forces import End, Forces
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
@@ -55,6 +56,7 @@ def read_slab_bars(name: str, text: object) -> SlabBars:
     >>> str(read_slab_bars("slab_bars", "2 x 10M at 250 mm"))
     '2 × 10M at 250 mm'
     """
+    refuse_other_bars(name, text)
     match = _SLAB_BARS.match(str(text))
     if match is None:
         raise UserError(

@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping, Sequence
-from typing import Any, get_args
+from collections.abc import Callable, Mapping, Sequence
+from typing import Any, TypeVar, get_args
 
+from lineproof.beams.bars import refuse_other_bars
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Face, Hook
 from lineproof.beams.continuous.typed_beam import read_list
 from lineproof.errors import FaultList, UserError
@@ -13,6 +14,7 @@ from lineproof.quantity import echo, read_quantity
 from lineproof.standards.a23_3.bars import BARS
 from lineproof.standards.codes import CodePair
 
+_T = TypeVar("_T")
 KEYS = ("face", "bars", "start", "end", "layer", "place", "hook_start", "hook_end", "serves")
 NEEDED = ("face", "bars", "start", "end")
 FACES, HOOKS, PLACES = get_args(Face), get_args(Hook), ("web", "overhang", "side face")
@@ -63,15 +65,13 @@ def _read_row(name: str, row: object, outline: BeamOutline | None, pair: CodePai
     layer = _choice(f"{name}, layer", row.get("layer", 1), LAYERS, faults)
     hooks = [_choice(f"{name}, {key}", str(row.get(key, "")), HOOKS, faults)
              for key in ("hook_start", "hook_end")]  # fmt: skip
-    match = _BARS.match(str(row["bars"]))
-    if match is None or match[2].upper() not in BARS.rows or int(match[1]) < 1:
-        again = ", a row for each size" if "+" in str(row["bars"]) else ""
-        faults.add(f"{name}, bars: {echo(row['bars'])} is not understood; write '2-25M'{again}")
-    ends = [_distance(f"{name}, {key}", row[key], faults) for key in ("start", "end")]
+    number, size = _take(faults, _read_bars, f"{name}, bars", row["bars"], (0, ""))
+    start, end = (
+        _take(faults, _read_distance, f"{name}, {key}", row[key], 0.0) for key in ("start", "end")
+    )
     faults.raise_if_any()
-    assert match is not None  # noqa: S101 - refused above
     run = BarRun(
-        face, layer, int(match[1]), match[2].upper(), ends[0], ends[1], place, hooks[0], hooks[1],
+        face, layer, number, size, start, end, place, hooks[0], hooks[1],
         str(row.get("serves", "")),
     )  # fmt: skip
     _check_order(name, run, faults)
@@ -90,12 +90,27 @@ def _choice(name: str, given: Any, known: Sequence[Any], faults: FaultList) -> A
     return given
 
 
-def _distance(name: str, given: Any, faults: FaultList) -> float:
+def _take(
+    faults: FaultList, read: Callable[[str, object], _T], name: str, given: object, missing: _T
+) -> _T:
     try:
-        return read_quantity(name, given, "mm").value
+        return read(name, given)
     except UserError as error:
         faults.take(error)
-        return 0.0
+        return missing
+
+
+def _read_bars(name: str, given: object) -> tuple[int, str]:
+    refuse_other_bars(name, given)
+    match = _BARS.match(str(given))
+    if match is None or match[2].upper() not in BARS.rows or int(match[1]) < 1:
+        again = ", a row for each size" if "+" in str(given) else ""
+        raise UserError(f"{name}: {echo(given)} is not understood; write '2-25M'{again}")
+    return int(match[1]), match[2].upper()
+
+
+def _read_distance(name: str, given: Any) -> float:
+    return read_quantity(name, given, "mm").value
 
 
 def _check_order(name: str, run: BarRun, faults: FaultList) -> None:
