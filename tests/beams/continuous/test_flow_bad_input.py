@@ -491,6 +491,22 @@ def test_a_spacing_that_is_not_read_has_one_fault() -> None:
     )
 
 
+@pytest.mark.parametrize(
+    ("given", "told"),
+    [
+        ("4 months", "write the shorter '3 months', which is safe"),
+        ("7 Months", "write the shorter '6 months', which is safe"),
+        ("1 year", "5 years or more; write '12 months'"),
+        ("2 years", "write the shorter '12 months', which is safe"),
+        ("10 years", "5 years or more; write '5 years or more'"),
+        ("2 weeks", "write '3 months'; of a shorter time no factor is given"),
+    ],
+)
+def test_a_duration_between_those_of_the_standard(given: str, told: str) -> None:
+    """S_t rises with time (9.8.2.5): S_ta of a shorter time leaves more deflection for later."""
+    matches(refused_at_start(attached_after=given), told)
+
+
 def test_imperial_and_bundled_bars_are_told_apart_from_slips() -> None:
     """#8: 510 mm2 and 25.4 mm (ASTM A615); 25M: 500 mm2 and 25.2 mm. Neither stands in for both."""
     matches(

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
@@ -70,6 +71,10 @@ AREA = Range("kPa", 0, 100, 1.8, zero=True)
 SHARE = Range("", 0, 1, 0.25, zero=True)
 UNIT_WEIGHT = Range("kN/m3", 10, 30, 24)
 LEAST_LEGS, MOST_LEGS = 2, 6
+ATTACHED = dict(zip(DURATIONS.rows, (3, 6, 12, 60), strict=True))
+"""Months of the durations of 9.8.2.5."""
+MONTHS = {"week": 12 / 52, "month": 1.0, "year": 12.0}
+_DURATION = re.compile(r"\s*(\d+(?:\.\d+)?)\s*(week|month|year)s?\s*", re.IGNORECASE)
 USUAL_STIRRUP = "10M"
 """By which zones are looked at whose size is not understood."""
 
@@ -198,7 +203,7 @@ def _read_alone(reader: InputReader) -> dict[str, Any]:
         "shear_method": take("shear_method", one_of, METHODS),
         "minimum_rule": take("minimum_rule", one_of, MINIMUM_RULES),
         "carries": take("carries", row_of, LIMITS),
-        "attached_after": take("attached_after", row_of, DURATIONS),
+        "attached_after": take("attached_after", _read_attached),
         "stirrup_legs": take("stirrup_legs", _read_legs),
         "closed_stirrups": take("closed_stirrups", yes_or_no),
         "torques": some("torques", read_torques) or {},
@@ -255,6 +260,27 @@ def _check_together(fields: dict[str, Any], given: Mapping[str, Any], faults: Fa
         check_construction(fields, faults)
     if not faults.faults:
         check_proportions(fields, faults)
+
+
+def _read_attached(name: str, given: object) -> str:
+    """Return one of the durations for which the standard has a factor.
+
+    Of one between them the shorter is safe: more of the deflection comes after it.
+    """
+    match = _DURATION.fullmatch(str(given))
+    if match is None or given in DURATIONS.rows:
+        return row_of(name, given, DURATIONS)
+    months = float(match[1]) * MONTHS[match[2].lower()]
+    reached = [row for row, least in ATTACHED.items() if least <= months]
+    if not reached:
+        told = f"{next(iter(ATTACHED))!r}; of a shorter time no factor is given"
+    elif months in (ATTACHED[reached[-1]], max(months, *ATTACHED.values())):
+        told = f"{reached[-1]!r}"
+    else:
+        told = f"the shorter {reached[-1]!r}, which is safe"
+    raise UserError(
+        f"{name}: {echo(given)}: 9.8.2.5 has factors for {', '.join(DURATIONS.rows)}; write {told}"
+    )
 
 
 def _read_legs(name: str, given: object) -> int:
