@@ -385,3 +385,30 @@ def test_a_file_in_the_place_of_a_folder_is_named(tmp_path: Path) -> None:
     with pytest.raises(UserError, match="a file stands in the place of the folder"):
         write_all({tmp_path / "report" / "audit.pdf": b"new"})
     assert (tmp_path / "report").read_text() == "notes"
+
+
+# -- words of the command ------------------------------------------------------------------------
+
+
+@pytest.mark.parametrize(
+    ("words", "told"),
+    [
+        (
+            ["issue", "--out", ".", "calc.ipynb"],
+            "--out: is no option of lineproof issue; there are --help, --into, --paper, --update",
+        ),
+        (
+            ["issue", "--intoo=.", "calc.ipynb", "--a4"],
+            "--intoo=.: is no option of lineproof issue; did you mean --into? there are --help",
+        ),
+        (["verify", "one.pdf", "two.pdf"], "two.pdf: is one word too many for lineproof verify"),
+    ],
+)
+def test_options_that_are_none_are_answered_with_those_there_are(
+    words: list[str], told: str, tmp_path: Path, monkeypatch: pytest.MonkeyPatch, capsys: Capture
+) -> None:
+    monkeypatch.chdir(tmp_path)
+    assert main(words) == 2
+    said = capsys.readouterr().err
+    assert said.startswith(told)
+    assert f"all of them are shown by lineproof {words[0]} --help" in said

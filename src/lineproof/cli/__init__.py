@@ -6,6 +6,7 @@ Exit codes: 0 done; 1 a check does not hold or a finding; 2 wrong input.
 from __future__ import annotations
 
 import argparse
+import difflib
 import os
 import sys
 from collections.abc import Sequence
@@ -50,6 +51,8 @@ def parser() -> argparse.ArgumentParser:
     _add_audit(commands)
     _add_verify(commands)
     _add_review(commands)
+    for own in commands.choices.values():
+        own.set_defaults(own=own)
     return made
 
 
@@ -195,7 +198,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         if reconfigure is not None:  # a terminal without a character shows its code
             reconfigure(errors="backslashreplace")
     try:
-        options = parser().parse_args(arguments)
+        options = _parsed(parser(), arguments)
         code = import_module(f"lineproof.cli.{options.command}").run(options)
         sys.stdout.flush()
     except UserError as error:
@@ -214,6 +217,30 @@ def main(arguments: Sequence[str] | None = None) -> int:
         sys.stderr.write(f"{_visible(f'{place}: cannot be reached ({error.strerror or error})')}\n")
         return UserError.exit_code
     return int(code)
+
+
+def _parsed(made: argparse.ArgumentParser, arguments: Sequence[str] | None) -> argparse.Namespace:
+    """Return the options; raises :class:`UserError` that names those there are instead."""
+    options, left = made.parse_known_args(arguments)
+    if not left:
+        return options
+    own = _names_of(options.own)
+    faults = []
+    for word in left:
+        if word.startswith("-"):
+            near = difflib.get_close_matches(word, own, n=1, cutoff=0.75)
+            hint = f"did you mean {near[0]}? " if near else ""
+            faults.append(
+                f"{word}: is no option of {options.own.prog}; {hint}there are {', '.join(own)}"
+            )
+    if not faults:
+        faults = [f"{word}: is one word too many for {options.own.prog}" for word in left]
+    raise UserError([*faults, f"all of them are shown by {options.own.prog} --help"])
+
+
+def _names_of(own: argparse.ArgumentParser) -> list[str]:
+    actions = own._actions  # noqa: SLF001 - argparse has no public name for it
+    return [name for action in actions for name in action.option_strings if name != "-h"]
 
 
 def _visible(text: str) -> str:
