@@ -17,10 +17,13 @@ from lineproof.notebook.display import (
     METADATA,
     bundle,
     cell_hash,
+    changed_since,
     refuse_replaced,
     register,
 )
 from lineproof.sheet import PartView, Sheet
+
+from ..beams.continuous.flow import start  # noqa: TID252 - the beam of all tests of the flow
 
 # Tags and attributes that JupyterLab leaves in untrusted HTML (its packages/apputils sanitizer).
 KEPT_TAGS = {
@@ -230,6 +233,30 @@ def test_a_beam_of_an_earlier_sheet_shows_nothing_below_new_inputs() -> None:
     refuse_replaced(before, {"sheet": now, "first": before})
     refuse_replaced(before, {"sheet": Sheet("B8", "Another beam")})
     refuse_replaced(before, {})
+
+
+def test_inputs_changed_without_the_start_cell_are_told() -> None:
+    """Of ``h`` the notebook holds something else from the start: it is not the input."""
+    sheet = Sheet("B7", "Beam")
+    sheet.typed = {"spans": ["7.6 m", "9.2 m"], "h": "620 mm", "f_c": "32 MPa", "cover": "30 mm"}
+    names: dict[str, object] = {"spans": ["7.6 m", "9.2 m"], "h": 5, "f_c": "32 MPa"}
+    assert changed_since(sheet, names) == []
+    now = names | {"spans": ["7.6 m", "9.4 m"], "h": 6, "cover": "40 mm"}
+    [told] = changed_since(sheet, now)
+    assert told.startswith("spans is ['7.6 m', '9.4 m'] now, but what follows rests on ['7.6 m', ")
+    assert told.endswith("run the cell that starts the calculation again")
+    sheet.typed = dict(sheet.typed, spans=["7.6 m", "9.4 m"])  # started again
+    assert changed_since(sheet, now) == []
+
+
+def test_a_beam_keeps_its_inputs_as_typed() -> None:
+    """A list that is changed in place is another value as well."""
+    spans = ["7.6 m", "9.2 m", "7.6 m"]
+    beam = start(spans=spans)
+    names = {"spans": spans}
+    assert changed_since(beam.sheet, names) == []
+    spans[1] = "9.4 m"
+    assert len(changed_since(beam.sheet, names)) == 1
 
 
 def test_unknown_names_of_lineproof_are_refused() -> None:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from copy import deepcopy
 from typing import Any
 
 from lineproof.beams import basics, choice, loading
@@ -287,6 +288,7 @@ def floor_beam(
     """
     given: dict[str, Any] = dict(locals())
     inputs, pair = read_floor_beam(given, sheet.project)
+    sheet.typed = deepcopy({name: value for name, value in given.items() if name != "sheet"})
     return _start(sheet, inputs, pair)
 
 

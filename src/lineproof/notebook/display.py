@@ -12,6 +12,7 @@ import sys
 from collections.abc import Mapping
 from html import escape
 from typing import Any
+from weakref import WeakKeyDictionary
 
 from lineproof.drawing import from_json, svg
 from lineproof.errors import UserError
@@ -29,6 +30,11 @@ _WIDEST = 26.0  # em; a longer formula breaks before one of its signs
 _CELL = "text-align:left;vertical-align:top"
 _NO_TEX = 'class="mathjax_ignore"'  # a "$" in a title must stay a "$"
 
+_HELD: WeakKeyDictionary[Sheet, tuple[Mapping[str, object], frozenset[str]]] = WeakKeyDictionary()
+"""Inputs of a sheet with the names of the notebook that held them when it was started."""
+_TOLD: WeakKeyDictionary[Sheet, int] = WeakKeyDictionary()
+"""The run of a cell in which it was last said that inputs of a sheet have changed."""
+
 Bundle = tuple[dict[str, Any], dict[str, Any]]
 
 
@@ -45,7 +51,13 @@ def show(view: PartView) -> None:
     from IPython.display import display  # noqa: PLC0415 - only inside IPython
 
     shell = _shell()
-    refuse_replaced(view.sheet, getattr(shell, "user_ns", {}))
+    names = getattr(shell, "user_ns", {})
+    refuse_replaced(view.sheet, names)
+    remarks = changed_since(view.sheet, names)
+    run = getattr(shell, "execution_count", 0)
+    if remarks and _TOLD.get(view.sheet) != run:  # once a cell, however many parts it shows
+        _TOLD[view.sheet] = run
+        sys.stderr.write("".join(f"{line}\n" for line in remarks))
     data, metadata = bundle(view, ran=_cells_run(shell))
     display(data, metadata=metadata, raw=True)  # type: ignore[no-untyped-call]
 
@@ -64,6 +76,32 @@ def refuse_replaced(sheet: Sheet, names: Mapping[str, Any]) -> None:
             f"{sheet.calc['id']}: this rests on a sheet from before the inputs were changed; run "
             "the cell that starts the calculation again, and mend what it refuses"
         )
+
+
+def changed_since(sheet: Sheet, names: Mapping[str, Any]) -> list[str]:
+    """Return a remark for every input that has another value now than the beam was started with.
+
+    A cell of the inputs that is run without the one that starts the beam changes no number below.
+    ``names`` are those of the notebook. Only a name that held the input when the first part was
+    shown counts as one: others may stand for anything.
+    """
+    typed, held = _HELD.get(sheet, ({}, frozenset()))
+    if typed is not sheet.typed:
+        held = frozenset(n for n, v in sheet.typed.items() if n in names and _same(names[n], v))
+        _HELD[sheet] = sheet.typed, held
+    return [
+        f"{name} is {names[name]!r:.60} now, but what follows rests on {sheet.typed[name]!r:.60}: "
+        "run the cell that starts the calculation again"
+        for name in sheet.typed
+        if name in held and name in names and not _same(names[name], sheet.typed[name])
+    ]
+
+
+def _same(one: object, other: object) -> bool:
+    try:
+        return bool(one == other)
+    except Exception:  # noqa: BLE001 - whatever a foreign object does when compared
+        return False
 
 
 def bundle(view: PartView, ran: list[str] | None = None) -> Bundle:

@@ -64,6 +64,8 @@ class Sheet(Finding):
     curb/A_cb = 45000 mm2
     """
 
+    typed: Mapping[str, object]
+    """Inputs as typed in the call that started the calculation, by their names."""
     shown: ClassVar[Callable[[PartView], None] | None] = None
     """Called with every part that closes; the notebook room sets it to display the part."""
 
@@ -85,6 +87,7 @@ class Sheet(Finding):
         self.member = ""
         self.scope = ""
         self.started_with = ""
+        self.typed: Mapping[str, object] = {}
         self.not_covered: list[Mapping[str, str]] = []
 
     @classmethod

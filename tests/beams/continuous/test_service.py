@@ -82,3 +82,17 @@ def test_the_construction_stage_cracks_the_root_of_a_cantilever(free: str) -> No
         entries = beam.sheet.entries_of(f"{key}-{stage}")
         assert entries["I_e1"].value == pytest.approx(I_e, rel=1e-5)
     assert entries["M_h"].value == pytest.approx(88.770e6, rel=1e-5)
+
+
+def test_what_counts_of_the_snow_is_said() -> None:
+    """With snow alone: of a beam without it the page says nothing."""
+    for changes, said in (({"use": "roof", "snow": "2.4 kPa"}, 1), ({}, 0)):
+        beam = analysed(**changes)
+        beam.flexure()
+        beam.deflections()
+        notes = [e for e in beam.sheet.entries_of("service").values() if e.kind == "note"]
+        assert len(notes) == said
+        assert all(
+            "No part of the snow load is taken as sustained" in (n.extra or {})["text"]
+            for n in notes
+        )

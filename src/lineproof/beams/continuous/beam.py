@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
+from copy import deepcopy
 from dataclasses import replace
 from typing import Any
 
@@ -282,6 +283,7 @@ def continuous_beam(
     """
     given: dict[str, Any] = dict(locals())
     inputs, pair = read_inputs(given, sheet.project)
+    sheet.typed = deepcopy({name: value for name, value in given.items() if name != "sheet"})
     _begin(sheet, f"{inputs!r} {pair!r}", anew=inputs.forces_file is not None)
     prepare(sheet, pair)
     sheet.member = member_of(inputs)

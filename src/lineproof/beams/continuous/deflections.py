@@ -41,6 +41,7 @@ from lineproof.beams.continuous.geometry import span_place
 from lineproof.beams.continuous.model import GIVEN, Model
 from lineproof.beams.continuous.service import record_construction, service_lines
 from lineproof.beams.steps import Steps
+from lineproof.formula import COMMON_PRACTICE
 from lineproof.record import Entry
 from lineproof.sheet import Sheet
 
@@ -49,6 +50,11 @@ _CONSTRUCTION = (
     "The forms are struck or shores of the floor above stand on the beam: dead load and the "
     "construction load act on all spans. The largest moment reached so far cracks the section for "
     "all later stages. The full dead load is taken, superimposed load included."
+)
+_SNOW = (
+    "No part of the snow load is taken as sustained. Beside snow as the principal load stands the "
+    "live load that accompanies it, and the sustained share of that. Where snow lies for months, "
+    "the designer adds its lasting part as dead load."
 )
 _NOT_COVERED = (
     "The moments are those of a frame analysis, of factored cases. Deflections need the moments of "
@@ -153,10 +159,13 @@ def _record_share(model: Model) -> Entry:
     """Record the share of the live load that is sustained, given or assumed."""
     typed = model.inputs.sustained
     share, said = sustained_share(model.inputs.use)
-    with model.sheet.part(SERVICE, "Service loads for deflections"):
+    sheet = model.sheet
+    with sheet.part(SERVICE, "Service loads for deflections"):
+        if "S" in model.kinds():
+            sheet.note("snow", _SNOW, title="Snow", clause="9.8.2", basis=COMMON_PRACTICE)
         if typed is not None:
-            return model.sheet.given("r_Ls", typed, source="given")
-        return model.sheet.given("r_Ls", share, source=said)
+            return sheet.given("r_Ls", typed, source="given")
+        return sheet.given("r_Ls", share, source=said)
 
 
 def _entries_of(model: Model, service: ServiceMoments, r_Ls: Entry) -> SpanEntries:
