@@ -6,6 +6,7 @@ from collections.abc import Iterable, Mapping
 from typing import Any
 
 from lineproof import beams
+from lineproof.beams.continuous.layout import BarRun
 from lineproof.record import Record
 from lineproof.sheet import Sheet
 
@@ -83,3 +84,12 @@ def run(beam: beams.ContinuousBeam, calls: Iterable[str] = CALLS) -> Sheet:
 def record_of(**inputs: Any) -> Record:
     """Return the record of the whole flow for the three-span beam with some inputs changed."""
     return run(start(**inputs)).close()
+
+
+def typed_row(run: BarRun) -> dict[str, Any]:
+    """Return a run of bars as it is typed."""
+    return {
+        "face": run.face, "bars": f"{run.number}-{run.size}", "start": f"{run.start:.12g} mm",
+        "end": f"{run.end:.12g} mm", "layer": run.layer, "place": run.place,
+        "hook_start": run.hook_start, "hook_end": run.hook_end, "serves": run.serves,
+    }  # fmt: skip

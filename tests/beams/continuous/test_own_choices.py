@@ -53,6 +53,11 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "columns": {1: ["350 mm x 350 mm x 3.2 m"] * 2, 3: ["350 mm x 350 mm x 3.2 m"]},
         "slab_bars": "2 x 10M at 300 mm",
     },
+    "thin bars lapped with thick ones in a narrow web": {  # the lap reached beside other bars
+        "spans": ["9.5 m", "10.4 m"], "supports": ["column 300 mm", "girder 500 mm", GIRDER],
+        "b_w": "300 mm", "h": "800 mm", "f_c": "25 MPa", "stirrup": "15M", "use": "retail area",
+        "spacing": "3 m", "shape": "rectangular", "h_f": None, "floor_weight": "3.4 kPa",
+    },
     "thick top bars at an assumed restraint": {  # not developed at the section of shear beside it
         "spans": ["1.9 m", "7.3 m"], "supports": ["free", "girder 400 mm", "column 700 mm"],
         "b_w": "280 mm", "h": "700 mm", "spacing": "4.7 m", "shape": "rectangular", "h_f": None,

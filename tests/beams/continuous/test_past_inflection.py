@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+from typing import Any
+
 import pytest
 
 from lineproof import beams
 
 from .edge_beam import edge, failing
-from .flow import CALLS, start
+from .flow import CALLS, analysed, start, typed_row
 
 
 def made(beam: beams.ContinuousBeam) -> beams.ContinuousBeam:
@@ -41,9 +44,21 @@ def test_bars_that_run_on_are_a_third_or_others_pass_too() -> None:
 def test_bars_that_end_before_the_longest_count_where_they_pass() -> None:
     """6-20M over support 2 and two in the overhangs: 2400/3 = 800 mm2, the two longest are 600.
 
-    The four others end 4250 mm from the axis, 921 mm past the point of inflection; 569 are needed.
+    Those are typed 1050 mm longer than they would be chosen, the bars that they are lapped with
+    1000 mm shorter. The four others end 4250 mm from the axis, 921 mm past the point of inflection;
+    569 are needed.
     """
-    beam = made(start(top_bars=["2-15M", "6-20M", "6-20M", "2-15M"]))
+    given = ["2-15M", "6-20M", "6-20M", "2-15M"]
+    chosen = analysed(top_bars=given).design.runs
+    longer: dict[tuple[str, float], dict[str, Any]] = {
+        ("2-15M", -150.0): {"end": 3050.0},
+        ("2-20M", 3350.0): {"start": 2300.0},
+    }
+    rows = [
+        typed_row(replace(run, **longer.get((f"{run.number}-{run.size}", run.start), {})))
+        for run in chosen
+    ]
+    beam = made(start(bar_runs=rows))
     assert failing(beam.sheet) == []
     entries = beam.sheet.entries_of("anchorage-top-2-left-third")
     assert entries["top-past-inflection"].value == (pytest.approx(2400 / 3), 6 * 300)

@@ -15,10 +15,9 @@ from typing import Any
 
 import pytest
 
-from lineproof.beams.continuous.layout import BarRun
 from lineproof.record import Record
 
-from .flow import record_of, run, start
+from .flow import record_of, run, start, typed_row
 
 DEEP: Mapping[str, Any] = {
     "spans": ["2.8 m", "9 m"],
@@ -26,15 +25,6 @@ DEEP: Mapping[str, Any] = {
     "h": "900 mm", "b_w": "400 mm",
     "loads": [{"type": "D", "span": 1, "line": "40 kN/m", "what": "facade"}],
 }  # fmt: skip
-
-
-def row_of(run: BarRun) -> dict[str, Any]:
-    """Return a run of bars as it is typed."""
-    return {
-        "face": run.face, "bars": f"{run.number}-{run.size}", "start": f"{run.start:.12g} mm",
-        "end": f"{run.end:.12g} mm", "layer": run.layer, "place": run.place,
-        "hook_start": run.hook_start, "hook_end": run.hook_end, "serves": run.serves,
-    }  # fmt: skip
 
 
 @pytest.fixture(scope="module")
@@ -83,8 +73,8 @@ def test_given_bars_without_skin_bars_fail() -> None:
     """Bars as built, none at the side faces: the check fails; with those of the design it holds."""
     beam = start(**DEEP)
     run(beam)
-    bare = record_of(**DEEP, bar_runs=[row_of(each) for each in beam.design.runs])
+    bare = record_of(**DEEP, bar_runs=[typed_row(each) for each in beam.design.runs])
     assert {"sag-2/skin-area", "hog-2-right/skin-area"} <= set(bare.failed)
-    whole = record_of(**DEEP, bar_runs=[row_of(each) for each in beam.design.detailing.bars])
+    whole = record_of(**DEEP, bar_runs=[typed_row(each) for each in beam.design.detailing.bars])
     assert whole.entries["sag-2/n_k"]["value"] == 3
     assert not {name for name in whole.failed if "skin" in name}

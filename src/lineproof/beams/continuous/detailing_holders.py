@@ -128,7 +128,8 @@ def _lapped(designed: Designed, before: BarRun, after: BarRun) -> list[BarRun]:
     span = span_at(designed.outline, (before.end + after.start) / 2)
     lap = lap_between(designed, replace(thin, start=designed.outline.axes[span - 1] + 1), thick)
     short = lap - (before.end - after.start)
-    if short > 0:
-        before = replace(before, end=before.end + ceil50(short / 2))
-        after = replace(after, start=after.start - ceil50(short / 2))
+    if short > 0 and thin is before:  # the thinner bars are made longer: they weigh less
+        before = replace(before, end=before.end + ceil50(short))
+    elif short > 0:
+        after = replace(after, start=after.start - ceil50(short))
     return [before, after]
