@@ -46,7 +46,8 @@ class SideOf:
     ``near`` names the support by its side of the span. ``runs`` are all bars of the section.
     ``cuts`` are those that end within the span before the support (top: before the longest and
     before the far support), first the ones that end first; ``kept`` the others, which run in or
-    reach furthest, and ``t_kept`` the shortest reach of these.
+    reach furthest, and ``t_kept`` the shortest reach of these. ``met`` are those of ``kept`` that
+    end beside bars of the next support.
     """
 
     face: Face
@@ -56,6 +57,7 @@ class SideOf:
     cuts: tuple[Ending, ...]
     kept: Runs
     t_kept: float
+    met: Runs = ()
 
     def continuing(self, index: int) -> Runs:
         """Return the bars that go on past a cut."""
@@ -176,7 +178,8 @@ def top_side(designed: Designed, runs: Runs, support: int, side: End) -> SideOf:
     endings = tuple(Ending(t, tuple(r for s, r in tips if s == t)) for t in ends)
     kept = tuple(r for t, r in tips if t >= most or t in met)
     t_kept = min((t for t, _ in tips if t >= most), default=0.0)
-    return SideOf("top", span, near, there, endings, kept, t_kept)
+    beside = tuple(r for t, r in tips if t in met)
+    return SideOf("top", span, near, there, endings, kept, t_kept, beside)
 
 
 def _one_with(run: BarRun, there: Runs) -> bool:

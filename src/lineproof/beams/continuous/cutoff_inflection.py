@@ -73,10 +73,14 @@ def _least(site: Site, runs: Runs) -> float:
 
 
 def _note_through(site: Site) -> None:
-    to = "to the free end" if site.writers.designed.cantilever(site.side.span) else "on"
+    side, free = site.side, site.writers.designed.cantilever(site.side.span)
+    on = text_of(run for run in side.kept if run not in side.met)
+    text = f"{on} run {'to the free end' if free else 'on'}"
+    if side.met:
+        text += f"; {text_of(side.met)} end beside the bars of the next support, past midspan"
     site.writers.sheet.note(
         "through",
-        f"{text_of(site.side.kept)} run {to}: they do not end near a point of inflection.",
+        f"{text}: they do not end near a point of inflection.",
         title="End of the top bars",
         basis=COMMON_PRACTICE,
     )

@@ -9,6 +9,7 @@ from lineproof.beams.continuous.anchorage import bar_of, development_length
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
 from lineproof.beams.continuous.cutoff import (
     Frame,
+    Zone,
     along,
     extension_formula,
     local,
@@ -131,10 +132,16 @@ def _record_cut(site: Site, index: int) -> None:
             _record_point(site, index, need)
         if zone == "compression":
             _note_compression(site, ending.t)
+    if zone != "compression":
+        record_zone(site, key, zone, ending.t, continuing)
+
+
+def record_zone(site: Site, key: str, zone: Zone, t: float, continuing: Sequence[BarRun]) -> None:
+    """Record by which rule of 12.10.5 bars end at t in the tension zone, "" for none."""
     if zone == "double area":
-        _record_double_area(site, key, ending.t, continuing)
-    elif zone != "compression":
-        _record_low_shear(site, key, ending.t)
+        _record_double_area(site, key, t, continuing)
+    else:
+        _record_low_shear(site, key, t)
 
 
 def _record_point(site: Site, index: int, need: Need) -> None:

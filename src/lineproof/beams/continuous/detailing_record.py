@@ -11,6 +11,7 @@ from lineproof.beams.continuous.anchorage_record import (
     sizes_of,
 )
 from lineproof.beams.continuous.cutoff import Frame
+from lineproof.beams.continuous.cutoff_elsewhere import record_ends_elsewhere
 from lineproof.beams.continuous.cutoff_ends import Runs, at_support, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_inflection import record_past_inflection
 from lineproof.beams.continuous.cutoff_record import Site, record_cuts, side_key
@@ -101,8 +102,10 @@ def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, su
         site = Site(writers, frame, lengths, side, section, key, title)
         if assumed_restraint(site):
             record_restrained_end(site)
+            record_ends_elsewhere(site, runs, side.runs)
         else:
             record_past_inflection(site)
             record_cuts(site)
+            record_ends_elsewhere(site, runs, side.kept)
         if designed.exterior(support):
             record_end_top(site)
