@@ -10,6 +10,7 @@ from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 from tests.audit import verifying as by
 
+from lineproof.audit.verify.html_page import OPENER_SAYS
 from lineproof.audit.verify.verification import Outcome, Source, Verification, Where, verify
 from lineproof.errors import UserError
 
@@ -135,6 +136,72 @@ OVER = "position: absolute; top: 9em; background: white"
 def test_what_a_browser_shows_and_a_simpler_reader_does_not_is_found(old: str, new: str) -> None:
     assert old in by.html()
     assert checked(by.html().replace(old, new, 1)).outcome is Outcome.ALTERED
+
+
+DATA = '<script type="application/vnd.lineproof.review+json">'
+
+
+def around(before: str, after: str) -> str:
+    """Return the page with the row of l = 6 m between two texts."""
+    page, start = by.html(), by.html().index(f'<div class="entry value" {LINE}')
+    end = page.index('<div class="entry', start + 1)
+    return f"{page[:start]}{before}{page[start:end]}{after}{page[end:]}"
+
+
+@pytest.mark.parametrize(
+    ("before", "after"),
+    [
+        (f"{DATA}<!--<script ></script>", "<!-- --></script>"),
+        (f"{DATA}</ script >", "</script>"),
+        (f"{DATA}</script x><p>M_r = 999</p></script>", ""),
+        ("<!-- a -- >", "<!-- -->"),
+    ],
+    ids=["script within a script", "end with a space", "end with a word", "comment with a space"],
+)
+def test_a_row_that_ends_of_scripts_and_comments_hide_from_a_browser_is_found(
+    before: str, after: str
+) -> None:
+    """HTML, 13.2.5: ``</ script`` ends no script, ``</script x`` does; ``-- >`` ends no comment."""
+    assert checked(around(before, after)).outcome is Outcome.ALTERED
+
+
+@pytest.mark.parametrize(
+    ("old", "new"),
+    [
+        ("<body>", '<body><button class="rv-open">Sealed. M_r = 999</button>'),
+        ("<body>", '<body><aside id="rv" hidden></b>'),
+        ("<body>", '<body><aside id="rv" hidden><frameset></frameset></aside>'),
+        ("<body>", '<body><aside id="rv" hidden><body hidden></body></aside>'),
+        ('aria-controls="rv">Review<', f'style="{OVER}" aria-controls="rv">M_r = 999<'),
+        ("<style>", '<style media="none">'),
+        ('<script type="module">', '<script type="text/plain">'),
+        (f'class="entry value" {LINE}', f'class="entry value"\xa0{LINE}'),
+        ("</main>", "</main x>"),
+        ('href="#', 'href="https://example.org/#'),
+    ],
+    ids=[
+        "words on the button", "tool never closed", "frames in a tool", "page hidden by a tool",
+        "words of the tools", "style for no screen", "script that does not run", "hard space",
+        "end with a word", "link to another page",
+    ],
+)  # fmt: skip
+def test_what_the_tools_and_odd_tags_do_to_the_page_is_found(old: str, new: str) -> None:
+    assert old in by.html()
+    assert checked(by.html().replace(old, new, 1)).outcome is Outcome.ALTERED
+
+
+def test_an_element_closed_by_a_slash_stays_open_in_a_browser() -> None:
+    """HTML, 13.2.6: the slash of ``<td/>`` means nothing, what follows stands inside it."""
+    page = re.sub(r"<(span|div|td)( [^<>]*)?></\1>", r"<\1\2/>", by.html(), count=1)
+
+    assert page != by.html()
+    assert checked(page).outcome is Outcome.ALTERED
+
+
+def test_the_words_of_the_button_are_those_of_the_tools() -> None:
+    button = re.search(r'<button [^<>]*class="rv-open"[^<>]*>([^<>]*)</button>', by.html())
+    assert button is not None
+    assert button[1] == OPENER_SAYS
 
 
 def test_a_line_wrapped_in_a_title_which_no_browser_shows_is_found() -> None:

@@ -99,7 +99,7 @@ class _Compared:
         except NOT_PRINTED as error:
             return [not_printed(error, self.sources)]
         fresh = read_page(printed, with_prose=self.with_prose)
-        return [*self._blocks(fresh), *self._styled(fresh)]
+        return [*self._blocks(fresh), *self._styled(fresh), *self._led(fresh)]
 
     def _walks(self) -> list[list[tuple[str, str]] | None]:
         """Return the parts of each calculation in the order in which the page shows them."""
@@ -144,6 +144,13 @@ class _Compared:
                     "shows may not be what stands in the page; if another version of lineproof "
                     "printed it, verify it with that version, or issue it again",
                 )
+
+    def _led(self, fresh: Page) -> Iterator[Alteration]:
+        """Tell of links that leave the page: where a browser has saved it, all name one place."""
+        away = self.given.leads - fresh.leads
+        if len(away) > 1 or (away and "" in self.given.leads):
+            what = f"a link of the page leads to another one: {min(away)}"
+            yield Alteration(Where.DRAWN, what)
 
     def _altered(
         self, anchor: str, what: str, where: Where, recorded: str = "", found: str = ""

@@ -10,6 +10,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from html.parser import HTMLParser
 
+from lineproof.audit.verify.html_written import Written, odd_raw
 from lineproof.package.reviewed import REVIEW_MIME
 from lineproof.record import MIME
 
@@ -27,8 +28,17 @@ _TOOLS_OPEN, _FILTERED = "rv-on", "rv-some"
 """Classes that the tools give the page: they are open, and they hide the lines not asked for."""
 _HARMFUL = frozenset({"script", "style", "template", "iframe", "object", "embed", "img", "svg",
                       "link", "base"})  # fmt: skip
+_TOOL_TAGS = frozenset({"a", "aside", "button", "dd", "details", "div", "dl", "dt", "h2", "h3",
+                        "input", "label", "li", "ol", "option", "p", "progress", "section",
+                        "select", "small", "span", "strong", "summary", "textarea",
+                        "ul"})  # fmt: skip
+"""All that the review tools are made of; what else stands in them acts on the page around them."""
+_OPENER = "rv-open"
+OPENER_SAYS = "Review"
+"""The words of the button that opens the review tools."""
 _LAID = frozenset({"style", "class", "id", "hidden", "popover", "inert"})
 _OTHERWISE = "what a browser shows and another program takes for a comment"
+_ODD = "written so that a browser shows something else than another program reads"
 OPEN = "the review tools stand open in the file as saved; what they show is not in the record"
 FILTERED = "saved while a filter of the review tools hid lines; open it and choose all lines"
 
@@ -60,7 +70,7 @@ class Page:
     """A page read: its blocks by anchor in order, prose, styles, scripts, texts of reviews.
 
     ``beside`` are the words that the review tools show beside lines, ``remarks`` say what else
-    they have done.
+    they have done. ``leads`` are the pages to which its links lead, "" for this one.
     """
 
     blocks: dict[str, Block] = field(default_factory=dict)
@@ -69,6 +79,7 @@ class Page:
     scripts: list[str] = field(default_factory=list)
     reviews: list[str] = field(default_factory=list)
     beside: list[str] = field(default_factory=list)
+    leads: set[str] = field(default_factory=set)
     remarks: list[str] = field(default_factory=list)
 
     def remark(self, told: str) -> None:
@@ -79,7 +90,7 @@ class Page:
 
 def read_page(text: str, *, with_prose: bool = False) -> Page:
     """Read a page; ``with_prose`` takes prose for a part of the page like any other."""
-    reader = _Reader(with_prose=with_prose)
+    reader = _Reader(Written(text), with_prose=with_prose)
     reader.feed(text)
     reader.close()
     return reader.page
@@ -88,17 +99,22 @@ def read_page(text: str, *, with_prose: bool = False) -> Page:
 class _Reader(HTMLParser):
     """Reads a page into blocks; an element belongs to the nearest anchor above it."""
 
-    def __init__(self, *, with_prose: bool) -> None:
+    def __init__(self, written: Written, *, with_prose: bool) -> None:
         super().__init__(convert_charrefs=True)
+        self.written = written
         self.page = Page()
         self.with_prose = with_prose
         self.open: list[tuple[str, Block]] = []
         self.raw: list[str] | None = None
-        self.passed = 0
-        self.inert = False
+        self.passed: list[str] = []
+        self.in_opener = False
 
     def handle_starttag(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
         """Note an element under its anchor."""
+        self._look_at_start(closed=False)
+        self._start(tag, attrs)
+
+    def _start(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
         # Of two attributes of one name a browser takes the first.
         named = {name: value or "" for name, value in reversed(attrs)}
         if self.passed or self._is_tool(tag, named):
@@ -107,6 +123,8 @@ class _Reader(HTMLParser):
             self._raw(tag, named)
         else:
             block = self._block(named)
+            if tag == "a" and "#" in named.get("href", ""):
+                self.page.leads.add(named["href"].rpartition("#")[0])
             self.page.beside += [named.pop(name) for name in _BESIDE if name in named]
             if tag == "html":
                 self._page(named)
@@ -120,28 +138,43 @@ class _Reader(HTMLParser):
 
     def handle_startendtag(self, tag: str, attrs: list[tuple[str, str | None]]) -> None:
         """Note an element without content."""
-        self.handle_starttag(tag, attrs)
+        self._look_at_start(closed=tag not in _VOID)
+        self._start(tag, attrs)
         if tag not in _VOID:
-            self.handle_endtag(tag)
+            self._end(tag)
+
+    def _look_at_start(self, *, closed: bool) -> None:
+        said = self.get_starttag_text() or ""
+        among = tuple(tag for tag, _ in self.open)
+        if self.written.odd_start(said, closed=closed, among=among):
+            self._foreign(said, _ODD)
 
     def handle_endtag(self, tag: str) -> None:
         """Close an element, and what was left open inside it."""
+        if self.written.odd_end(tag, self.getpos()) or (self.raw and odd_raw(self.raw[-1])):
+            self._foreign(tag, _ODD)
+        self._end(tag)
+
+    def _end(self, tag: str) -> None:
         self.raw = None
         if self.passed:
-            self.passed -= tag not in _VOID
-            self.inert = self.inert and self.passed > 0
+            if tag not in _VOID and self.passed.pop() != tag:
+                # A browser passes over it and goes on inside, where all that follows may be hidden.
+                self._in_tools(f"an end of {tag} that has no beginning")
         elif any(tag == opened for opened, _ in self.open):
             while self.open.pop()[0] != tag:
                 pass
 
     def handle_data(self, data: str) -> None:
         """Note a text."""
+        text = " ".join(data.split())
         if self.passed:
+            if self.in_opener and text not in ("", OPENER_SAYS):
+                self._in_tools(f"{_OPENER} says {text}")
             return
         if self.raw is not None:
             self.raw[-1] += data
             return
-        text = " ".join(data.split())
         if text:
             block = self._current()
             block.texts.append(text)
@@ -150,15 +183,22 @@ class _Reader(HTMLParser):
 
     def handle_comment(self, data: str) -> None:
         """Note what is a comment here and ends earlier for a browser."""
-        if data.startswith((">", "->")) or "--!>" in data:
+        # In a field for text a browser shows it, and ends the field where it says so.
+        if self.passed or self.written.odd_comment(data, self.getpos()):
             self._foreign(data)
 
     def unknown_decl(self, data: str) -> None:
         """Note a marked section, of which a browser shows what stands behind its first bracket."""
         self._foreign(data)
 
-    def _foreign(self, data: str) -> None:
-        self._current().drawn.append(f"{_OTHERWISE}: {' '.join(data.split())}")
+    def _foreign(self, data: str, what: str = _OTHERWISE) -> None:
+        block = self._current()
+        if any(block is prose for prose in self.page.prose):
+            block = self._anchored(block.anchor)  # it may act beyond the prose
+        block.drawn.append(f"{what}: {' '.join(data.split())}")
+
+    def _in_tools(self, what: str) -> None:
+        self._anchored("").drawn.append(f"in the review tools: {what}")
 
     def _in_prose(self, tag: str, named: dict[str, str], anchor: str) -> None:
         """Note what no prose of ours has: it looks like the working, or is laid over it."""
@@ -176,20 +216,25 @@ class _Reader(HTMLParser):
 
     def _pass(self, tag: str, named: dict[str, str]) -> None:
         """Pass over a tool; what would change the page around it is noted all the same."""
-        self.passed += tag not in _VOID
-        if tag == "template" and self.passed == 1:
-            self.inert = True
-        elif not self.inert:
-            if named.get("id") == "rv" and "hidden" not in named:
-                self.page.remark(OPEN)
-            if tag in _HARMFUL or "style" in named or any(n.startswith("on") for n in named):
-                self._anchored("").drawn.append(f"in the review tools: {tag} {sorted(named)}")
+        if not self.passed:
+            self.in_opener = named.get("class") == _OPENER
+        if tag not in _VOID:
+            self.passed.append(tag)
+        if named.get("id") == "rv" and "hidden" not in named:
+            self.page.remark(OPEN)
+        acts = "style" in named or any(name.startswith("on") for name in named)
+        if acts or tag not in _TOOL_TAGS:
+            self._in_tools(f"{tag} {sorted(named)}")
 
     def _is_tool(self, tag: str, named: dict[str, str]) -> bool:
-        """Tell whether this is a tool of the review page, which stands apart from the print."""
+        """Tell whether this is a tool of the review page, which stands apart from the print.
+
+        What the tools are made from, a template, is a part of the page as issued.
+        """
         top = all(opened in ("html", "body") for opened, _ in self.open)
-        tool = named.get("id") == "rv" or named.get("class") == "rv-open"
-        return top and (tool or (tag == "template" and set(named) == {"id"}))
+        tool = (tag, named.get("id")) == ("aside", "rv")
+        opener = (tag, named.get("class")) == ("button", _OPENER)
+        return top and (tool or opener)
 
     def _raw(self, tag: str, named: dict[str, str]) -> None:
         kind = named.get("type", "")
@@ -199,7 +244,9 @@ class _Reader(HTMLParser):
             self.raw = self.page.reviews
         else:
             self.raw = [] if kind == MIME else self.page.scripts
-        self.raw.append(named.get("src", ""))
+        # What it says depends on its attributes too: a style sheet for no screen styles nothing.
+        said = {} if kind in (MIME, REVIEW_MIME) else named
+        self.raw.append("".join(f"{name}={value} " for name, value in sorted(said.items())))
 
     def _current(self) -> Block:
         return self.open[-1][1] if self.open else self._anchored("")
