@@ -16,6 +16,7 @@ from lineproof.cli import main
 from lineproof.cli.files import write_all
 from lineproof.cli.progress import Progress
 from lineproof.errors import UserError
+from lineproof.notebook.display import shown_hash
 from lineproof.record import MIME
 
 Notebook = dict[str, Any]
@@ -73,6 +74,49 @@ def test_an_input_that_no_code_uses_is_refused(
         "reactions_csv=reactions_csv into the call that takes it, or take the line out\n"
     )
     assert [file.name for file in tmp_path.iterdir()] == ["beam.ipynb"]
+
+
+def shown_by_hand(beam: Notebook, path: Path, *, with_hash: bool) -> None:
+    """Store the beam with another resistance under its cell: 556 kN.m for 456; the record stays."""
+    output = next(
+        output
+        for cell in beam["cells"]
+        for output in cell.get("outputs", [])
+        if "456" in "".join(output.get("data", {}).get("text/html", ""))
+    )
+    for kind in ("text/html", "text/plain"):
+        output["data"][kind] = "".join(output["data"][kind]).replace("456", "556")
+    if with_hash:
+        output["metadata"]["lineproof"]["shown"] = shown_hash(output["data"])
+    path.write_text(json.dumps(beam), encoding="utf-8")
+
+
+@pytest.mark.parametrize("with_hash", [False, True])
+def test_recheck_names_an_output_changed_by_hand(
+    beam: Notebook, tmp_path: Path, capsys: Capture, *, with_hash: bool
+) -> None:
+    """The lines of the record agree all the same: what a reader sees is not what they say."""
+    path = tmp_path / "beam.ipynb"
+    shown_by_hand(beam, path, with_hash=with_hash)
+
+    assert main(["recheck", str(path)]) == 1
+    said = capsys.readouterr().out
+    assert said.startswith(f"{path}: 12 lines agree\n")
+    assert "shows part 'flexure' otherwise than" in said
+    assert "its output was changed by hand" in said
+
+
+def test_lines_names_an_output_changed_by_hand(
+    beam: Notebook, tmp_path: Path, capsys: Capture
+) -> None:
+    path = tmp_path / "beam.ipynb"
+    shown_by_hand(beam, path, with_hash=False)
+
+    assert main(["lines", str(path)]) == 1
+    said = capsys.readouterr()
+    assert "flexure/M_r" in said.out
+    assert f"{path}: cell" in said.err
+    assert "shows part 'flexure' otherwise than it was run" in said.err
 
 
 def test_recheck_refuses_a_calc_never_run(unrun: Notebook, tmp_path: Path, capsys: Capture) -> None:

@@ -9,7 +9,7 @@ from collections.abc import Iterable, Mapping
 from typing import Any
 
 from lineproof.formula import parse_criterion
-from lineproof.notebook.records import altered_lines, read_records
+from lineproof.notebook.records import altered_lines, altered_shown, read_records
 from lineproof.record import Record
 from lineproof.record.entry import CRITERIA, VALUES
 from lineproof.typeset import printable
@@ -21,7 +21,10 @@ _OWN = ("typed", "source", "table", "row", "numbers", "procedure", "settings", "
 
 
 def run(options: argparse.Namespace) -> int:
-    """Print the lines of a file; returns 1 where one does not follow from what it rests on."""
+    """Print the lines of a file; returns 1 where one does not follow from what it rests on.
+
+    So it does where a notebook shows a part otherwise than it was run.
+    """
     records = read_records(options.file)
     if options.json:
         sys.stdout.write(json.dumps(as_json(records), indent=1, allow_nan=False) + "\n")
@@ -29,7 +32,7 @@ def run(options: argparse.Namespace) -> int:
         sys.stdout.writelines(f"{line}\n" for line in as_table(records))
     altered = [
         f"{record.calc_id}: {found}" for record in records for found in altered_lines(record)
-    ]
+    ] + [f"{options.file}: {said}" for said in altered_shown(options.file)]
     for sentence in altered[:MOST_NAMED]:
         sys.stderr.write(f"{printable(sentence)}\n")
     if len(altered) > MOST_NAMED:

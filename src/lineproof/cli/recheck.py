@@ -6,7 +6,15 @@ import argparse
 import sys
 
 from lineproof.cli.progress import Progress
-from lineproof.cli.rerun import Rerun, Stored, failed_checks, load_all, report_changes, rerun_all
+from lineproof.cli.rerun import (
+    Rerun,
+    Stored,
+    failed_checks,
+    load_all,
+    report_changes,
+    report_shown,
+    rerun_all,
+)
 from lineproof.errors import UserError
 
 
@@ -31,11 +39,11 @@ def _refuse_unrun(found: list[Stored]) -> None:
 
 def _report(rerun: Rerun) -> int:
     record = rerun.calc.record
-    failed = failed_checks(record)
+    failed, altered = failed_checks(record), report_shown(rerun)
     said = (
         report_changes(rerun) if rerun.changes
         else [f"{rerun.path}: {len(record.entries)} lines agree"]
     )  # fmt: skip
-    for sentence in (*said, *failed):
+    for sentence in (*said, *altered, *failed):
         sys.stdout.write(f"{sentence}\n")
-    return 1 if rerun.changes or failed else 0
+    return 1 if rerun.changes or altered or failed else 0

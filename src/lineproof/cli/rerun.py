@@ -15,9 +15,11 @@ from lineproof.notebook.compare import Change, compare
 from lineproof.notebook.execute import execute
 from lineproof.notebook.read import (
     Calc,
+    altered_outputs,
     calc_of,
     check_parameters,
     has_outputs,
+    shown_otherwise,
     stale_cells,
 )
 from lineproof.notebook.unused import unused_inputs
@@ -132,6 +134,23 @@ def report_changes(rerun: Rerun) -> list[str]:
         *(f"{name}: {sentence}" for sentence in stale_cells(rerun.stored.cells)),
         f"{name}: {len(ids)} {'line differs' if len(ids) == 1 else 'lines differ'} from a re-run",
         *(f"  {line}" for line in lines[:MOST_CHANGES]),
+        *([f"  and {hidden} more"] if hidden > 0 else []),
+    ]
+
+
+def report_shown(rerun: Rerun) -> list[str]:
+    """Return which parts are shown otherwise than they were run, as sentences.
+
+    Where lines differ, what they show differs as well: then only outputs are told that are not
+    those of their own run.
+    """
+    stored = rerun.stored.cells
+    said = altered_outputs(stored)
+    if not rerun.changes and not said:
+        said = shown_otherwise(stored, cells_of(json.loads(rerun.text), str(rerun.path)))
+    hidden = len(said) - MOST_CHANGES
+    return [
+        *(f"{rerun.path}: {sentence}" for sentence in said[:MOST_CHANGES]),
         *([f"  and {hidden} more"] if hidden > 0 else []),
     ]
 

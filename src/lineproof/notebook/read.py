@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
@@ -188,16 +188,38 @@ def altered_outputs(cells: tuple[Cell, ...]) -> list[str]:
     """
     said = []
     for cell in cells:
-        for output, data in data_of(cell, ANCHOR):
+        for output, data in _parts(cell):
             note = output.get("metadata", {}).get(METADATA)
             kept = note.get("shown") if isinstance(note, Mapping) else None
             if kept and kept != shown_hash(output["data"]):
-                key = data.get("part") if isinstance(data, Mapping) else ""
                 said.append(
-                    f"{cell.name} shows part {key!r} otherwise than it was run: its output was "
-                    "changed by hand"
+                    f"{cell.name} shows part {_key(data)!r} otherwise than it was run: its output "
+                    "was changed by hand"
                 )
     return said
+
+
+def shown_otherwise(stored: tuple[Cell, ...], again: tuple[Cell, ...]) -> list[str]:
+    """Say which parts are shown otherwise than a fresh run of the same record shows them.
+
+    Whoever changes an output by hand may change the hash in its metadata as well.
+    """
+    fresh = {_key(data): shown_hash(out["data"]) for cell in again for out, data in _parts(cell)}
+    return [
+        f"{cell.name} shows part {_key(data)!r} otherwise than a re-run: its output was changed "
+        "by hand, or printed by another version"
+        for cell in stored
+        for output, data in _parts(cell)
+        if shown_hash(output["data"]) != fresh.get(_key(data))
+    ]
+
+
+def _parts(cell: Cell) -> Iterator[tuple[Mapping[str, Any], Any]]:
+    return data_of(cell, ANCHOR)
+
+
+def _key(data: object) -> str:
+    return str(data.get("part")) if isinstance(data, Mapping) else ""
 
 
 def _stale(cell: Cell, later: list[list[str]], *, shows_part: bool) -> list[str]:

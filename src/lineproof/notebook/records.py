@@ -28,6 +28,19 @@ def altered_lines(record: Record) -> list[str]:
     return [str(difference) for difference in recompute(record)]
 
 
+def altered_shown(path: Path) -> list[str]:
+    """Return a sentence per part that a notebook shows otherwise than it was run.
+
+    Nothing for another file: a package is looked at by ``lineproof verify``.
+    """
+    if path.suffix.lower() != ".ipynb":
+        return []
+    from lineproof.notebook.cells import cells_of, load_notebook  # noqa: PLC0415 - by kind of file
+    from lineproof.notebook.read import altered_outputs  # noqa: PLC0415 - by kind of file
+
+    return altered_outputs(cells_of(load_notebook(path), str(path)))
+
+
 def read_records(path: Path) -> list[Record]:
     """Read the records of a file by its kind; raises :class:`UserError` that names the file."""
     readers: dict[str, Callable[[Path], list[Record]]] = {
