@@ -19,6 +19,7 @@ from pypdf.generic import (
     DictionaryObject,
     FloatObject,
     NameObject,
+    NumberObject,
     TextStringObject,
 )
 from tests.audit import verifying as by
@@ -300,6 +301,70 @@ def test_codes_led_to_other_glyphs_are_found() -> None:
     assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
 
 
+def test_a_font_of_which_readers_draw_another_file_is_found() -> None:
+    """A font of TrueType outlines is drawn from FontFile2, wherever else outlines stand."""
+    made = by.writer(by.pdf())
+    for font in each_font(made):
+        descendant = font["/DescendantFonts"][0].get_object()
+        other = {"/CIDFontType0": "/CIDFontType2", "/CIDFontType2": "/CIDFontType0"}
+        descendant[NameObject("/Subtype")] = NameObject(other[descendant["/Subtype"]])
+
+    assert verify(by.written(made), "b.pdf").outcome is Outcome.ALTERED
+
+
+@pytest.mark.parametrize(
+    "tag",
+    [
+        b"/OC <</Type/OCMD>> BDC",
+        b"/Span <</ActualText <FEFF00390039>>> BDC",
+        b"/Span <</MCID 7/E (99)>> BDC",
+        b"/Foo BDC",
+    ],
+    ids=["layer", "text for a number", "expansion", "tag without properties"],
+)
+def test_a_tag_around_a_number_that_our_printer_does_not_write_is_found(tag: bytes) -> None:
+    """PDF 32000, 8.11 and 14.9.4: a layer may not be shown, and ActualText is what is copied."""
+    start = number(by.pdf(), "4").start
+
+    def wrap(operators: bytes) -> bytes:
+        first = operators.rindex(b"\nq 1 0 0 -1 ", 0, start) + 1
+        last = operators.index(b"\nQ\n", start) + 3
+        inside = operators[first:last]
+        return operators[:first] + tag + b"\n" + inside + b"EMC\n" + operators[last:]
+
+    found = verify(by.redrawn(by.pdf(), WORKING, wrap), "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert "is drawn on the page by another program" in said(found)
+
+
+def test_streams_joined_by_another_program_leave_the_content_intact() -> None:
+    made = by.writer(by.pdf())
+    page, (before, own) = made.pages[WORKING], (DecodedStreamObject(), DecodedStreamObject())
+    before.set_data(b"")
+    own.set_data(by.contents(by.pdf(), WORKING))
+    page[NameObject("/Contents")] = ArrayObject([made._add_object(each) for each in (before, own)])
+
+    assert verify(by.written(made), "b.pdf").alterations == ()
+
+
+@pytest.mark.parametrize(
+    ("key", "value", "told"),
+    [
+        ("/Rotate", NumberObject(180), "turned by 180 degrees"),
+        ("/UserUnit", FloatObject(0.01), "shown at 0.01 times its size"),
+    ],
+)
+def test_a_page_shown_turned_or_in_another_size_is_told(key: str, value: Any, told: str) -> None:
+    made = by.writer(by.pdf())
+    made.pages[WORKING][NameObject(key)] = value
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert found.outcome is Outcome.HANDLED
+    assert f"page {WORKING + 1}: {told}" in found.remarks
+
+
 @pytest.mark.parametrize("widths", [[0, [-500] * 200], [0, 300, 0]], ids=["list", "range"])
 def test_glyphs_that_move_another_way_are_found(widths: list[Any]) -> None:
     """Moved backwards, 12 reads 21; not moved on, digits lie upon each other."""
@@ -421,6 +486,28 @@ def test_a_link_with_a_border_is_laid_over_the_page() -> None:
     assert told.startswith(f"page {WORKING + 1}: laid over by others: Link, over line ")
 
 
+def test_a_link_that_starts_a_program_is_told() -> None:
+    made = by.writer(by.pdf())
+    action = {NameObject("/S"): NameObject("/Launch"), NameObject("/F"): TextStringObject("a.exe")}
+    link = {
+        NameObject("/Subtype"): NameObject("/Link"),
+        NameObject("/Rect"): numbers(60, 60, 560, 700),
+        NameObject("/Border"): numbers(0, 0, 0),
+        NameObject("/A"): DictionaryObject(action),
+    }
+    placed = made._add_object(DictionaryObject(link))
+    made.pages[WORKING][NameObject("/Annots")] = ArrayObject([placed])
+
+    found = verify(by.written(made), "b.pdf")
+
+    assert [remark for remark in found.remarks if f"page {WORKING + 1}: laid over" in remark]
+
+
+def _part_shown(made: Any) -> None:
+    wanted = DictionaryObject({NameObject("/ViewArea"): NameObject("/TrimBox")})
+    made.root_object[NameObject("/ViewerPreferences")] = wanted
+
+
 def _attached(made: Any) -> None:
     made.add_attachment("values.txt", b"M_r = 999 kN.m")
 
@@ -448,8 +535,9 @@ def _portfolio(made: Any) -> None:
         (_script, "holds a script or an action that runs when the file or a page is opened"),
         (_form, "holds a form (XFA) that some readers show in place of the pages"),
         (_portfolio, "is made a portfolio"),
+        (_part_shown, "asks a reader to show or print a part of each page alone"),
     ],
-    ids=["attached", "script", "form", "portfolio"],
+    ids=["attached", "script", "form", "portfolio", "part of a page"],
 )
 def test_what_others_put_beside_the_pages_is_told(add: Callable[[Any], None], told: str) -> None:
     made = by.writer(by.pdf())

@@ -20,6 +20,7 @@ _TABLE = re.compile(rb"\s*(?:xref|\d+ \d+ obj)")
 _HEAD, _TAIL = 1024, 4096
 _LETTER, _A4 = (612.0, 792.0), (595.28, 841.89)
 _LINK = "/Link"
+_VIEWED = frozenset({"/ViewArea", "/ViewClip", "/PrintArea", "/PrintClip"})
 _OF_BORDER = 2
 """Place of the width in a border: behind the radii of its corners."""
 _FIRST_PAGES = 3
@@ -50,6 +51,12 @@ def _runs(action: Any) -> bool:
     """Tell whether opening a file does more than to go to a page."""
     done = action.get_object() if action is not None else []  # a place to go to is a list
     return not isinstance(done, list) and done.get("/S") != "/GoTo"
+
+
+def _acts(link: Any) -> bool:
+    """Tell whether a link does more than to lead to a page or an address."""
+    action = link["/A"].get_object() if "/A" in link else {"/S": "/GoTo"}
+    return "/AA" in link or "/Next" in action or action.get("/S") not in ("/GoTo", "/URI")
 
 
 def is_pdf(content: bytes) -> bool:
@@ -143,6 +150,8 @@ class File:
             yield "holds a script or an action that runs when the file or a page is opened"
         if "/XFA" in form:
             yield "holds a form (XFA) that some readers show in place of the pages"
+        if _VIEWED.intersection(self._held("/ViewerPreferences")):
+            yield "asks a reader to show or print a part of each page alone"
         if "/Collection" in root:
             yield "is made a portfolio: some readers show what is attached in place of the pages"
 
@@ -163,13 +172,20 @@ class File:
                 signed.append(str(named or entry.get("/T", "") or "no name given")[:60])
         return signed
 
+    def turned(self, page: Any) -> str:
+        """Say how a page is shown turned or in another size than its paper; "" for neither."""
+        turn, scale = int(page.get("/Rotate", 0) or 0) % 360, float(page.get("/UserUnit", 1) or 1)
+        told = [f"turned by {turn} degrees"] if turn else []
+        told += [f"shown at {scale:g} times its size"] if scale != 1 else []
+        return " and ".join(told)
+
     def annotations(self, page: Any) -> list[tuple[str, Box]]:
         """Name what others have laid over a page, and where: comments, stamps, signatures."""
         found = []
         for reference in page.get("/Annots", None) or []:
             entry = reference.get_object()
             kind = str(entry.get("/Subtype", ""))
-            if kind != _LINK or "/AP" in entry or _has_border(entry):
+            if kind != _LINK or "/AP" in entry or _has_border(entry) or _acts(entry):
                 text = str(entry.get("/Contents", "") or "")[:60]
                 named = f"{kind.lstrip('/') or 'annotation'}{f' “{text}”' if text else ''}"
                 found.append((named, _rectangle(entry.get("/Rect"))))

@@ -19,6 +19,9 @@ _BLOCK = re.compile(rb"begin(bfchar|bfrange)(.*?)endbf(?:char|range)", re.DOTALL
 _PREFIX = re.compile(r"^/?[A-Z]{6}\+")
 _LONGEST_RANGE = 0xFFFF
 _USUAL_WIDTH = 1000
+_FILES = ("/FontFile", "/FontFile2", "/FontFile3")
+_DRAWN_BY = {"/CIDFontType0": "/FontFile3", "/CIDFontType2": "/FontFile2"}
+"""Which file of a font is drawn, by the kind of the font."""
 UNKNOWN = "\ufffd"
 """Stands for a glyph of which the file does not say what it means."""
 
@@ -97,6 +100,9 @@ def _outlines(font: Any) -> dict[int, str]:
     descriptor = descendant["/FontDescriptor"].get_object()
     maps = font.get("/Encoding"), descendant.get("/CIDToGIDMap", "/Identity")
     odd = "" if maps == ("/Identity-H", "/Identity") else "mapped"
+    kind, files = str(descendant.get("/Subtype", "")), set(_FILES).intersection(descriptor)
+    if _DRAWN_BY.get(kind) not in files or len(files) > 1:
+        odd += "of another file"  # readers part on which one they draw
     wide = _widths(descendant)
     least = float(descendant.get("/DW", _USUAL_WIDTH))
     for key, draw in (("/FontFile3", _compact), ("/FontFile2", _true_type)):

@@ -101,6 +101,14 @@ _PLACE_IN_FILE = re.compile(rb"/MCID \d+")
 _ESCAPE = re.compile(rb"\\(?:([0-7]{1,3})|(\r\n|.))", re.DOTALL)
 _ESCAPED = {b"n": b"\n", b"r": b"\r", b"t": b"\t", b"b": b"\b", b"f": b"\f", b"\n": b"", b"\r": b"",
             b"\r\n": b""}  # fmt: skip
+_OF_TAG = re.compile(rb"/MCID \d+|/Lang\([\w-]*\)")
+_TAGS = frozenset({
+    b"Span<<>>", b"Artifact<</Type/Layout>>", b"Artifact<</Type/Pagination>>",
+    b"Artifact<</Attached[/Top]/Subtype/Header/Type/Pagination>>",
+    b"Artifact<</Attached[/Bottom]/Subtype/Footer/Type/Pagination>>",
+})  # fmt: skip
+"""The tags around what our printer draws. Others put it on a layer that is not shown, or give it a
+text that is copied and read aloud in its place."""
 _CONTENTS_NUMBER = b"BT/Span<</ActualText<FEFF00202060>>>BDC"
 _SEE_PAGE = re.compile(r"see page (\d+)\Z")
 _PAGE_OF = re.compile(r"Page (\d+) of (\d+)\Z")
@@ -195,6 +203,9 @@ class _Page:
         while place < len(content):
             found = step(content, place)
             kind = found.lastgroup if found else None
+            if found is None and content[place : place + 1].isspace():
+                place += 1  # where another program has joined streams
+                continue
             if found is None or (kind == "close" and not depth):
                 end = self._next(place)
                 yield self._foreign(content[place:end])
@@ -208,6 +219,8 @@ class _Page:
             else:
                 properties = found["properties"] or b""
                 depth += 1
+                if not _is_ours(found["tag"], properties):
+                    yield self._foreign(found[0])
                 self._enter(found["tag"], properties)
                 if b"/Alt" in properties:
                     end = self._end_of(place)
@@ -324,6 +337,13 @@ class _Page:
     def _taken(height: bytes, base: float, heights: list[float]) -> bytes:
         heights.append(float(height) - base)
         return b"y"
+
+
+def _is_ours(tag: bytes, properties: bytes) -> bool:
+    """Tell whether a tag is one of our printer's; that of a figure is compared with its drawing."""
+    if b"/Alt" in properties:
+        return tag == b"Span"
+    return tag + _OF_TAG.sub(b"", properties) in _TAGS
 
 
 def _extent(body: bytes) -> tuple[float, float, float, float]:

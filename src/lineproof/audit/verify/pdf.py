@@ -302,6 +302,9 @@ class _Checking:
         for number, page in enumerate(self.file.pages):
             if owns and number not in mine:
                 continue
+            turned = self.file.turned(page)
+            if turned and number in mine:
+                self.remarks.append(f"page {number + 1}: {turned}")
             for told, box in self.file.annotations(page):
                 over = _over(owns, number, box)
                 self.remarks.append(f"page {number + 1}: laid over by others: {told}{over}")
