@@ -100,6 +100,15 @@ def test_the_simplified_method_where_only_the_general_one_is_recorded() -> None:
     assert said_of(record, "beam/V_c", "138 kN")[0] is Verdict.ORIGIN  # beta 0.20 is neither
 
 
+def test_the_simplified_method_is_none_beyond_400_mpa() -> None:
+    """11.3.6.3 holds for f_y up to 400 MPa: beside bars of grade 500 beta 0.18 is no other way."""
+    record, part = spans(grade="500R"), "shear-1-left"
+    assert said_of(record, f"{part}/beta", "0.18")[0] is Verdict.ORIGIN
+    assert said_of(record, f"{part}/theta", "35 deg")[0] is Verdict.ORIGIN
+    concrete = 0.65 * 0.18 * math.sqrt(32) * 380 * value(record, f"{part}/d_v") / 1000
+    assert said_of(record, f"{part}/V_c", f"{concrete:.1f} kN")[0] is Verdict.ORIGIN
+
+
 # -- development, modulus, inertia -------------------------------------------------------------
 
 
@@ -125,6 +134,14 @@ def test_the_general_modulus_of_elasticity() -> None:
     assert "8.6.2.2" in note
     ratio = said_of(spans(), "deflection-1-sections/n_E", f"{200_000 / by_hand:.2f}")
     assert ratio[0] is Verdict.OTHER_METHOD
+
+
+def test_the_short_modulus_is_that_of_normal_density_only() -> None:
+    """8.6.2.3 is of normal density: 4500 sqrt(35) = 26 622 is none of semi-low."""
+    record = spans(density="semi-low", f_c="35 MPa")
+    assert value(record, "materials/lambda_") == 0.85
+    text = f"{4500 * math.sqrt(35):.0f} MPa"
+    assert said_of(record, "materials/E_c", text)[0] is Verdict.ORIGIN
 
 
 def test_the_moment_of_inertia_at_midspan_alone() -> None:
@@ -218,6 +235,36 @@ def test_no_coefficient_where_they_do_not_apply() -> None:
     load = 1.25 * value(record, "loads/w_D2") + 1.5 * value(record, "loads/w_L2")
     text = f"{load * 8.75**2 / 16:.1f} kN.m"
     assert said_of(record, "sag-2/M_f", text)[0] is Verdict.ORIGIN
+
+
+def test_the_coefficient_of_an_end_is_that_of_what_it_is_cast_with() -> None:
+    """Table 9.1: w_f l_n^2/16 at a column, w_f l_n^2/24 at a spandrel; on a wall 1/11 in the span.
+
+    Between columns of 400 and 450 mm l_n is 8 - 0.425 = 7.575 m.
+    """
+    spans_of = ("8 m", "8 m", "8 m")
+    supports = ("column 400 mm", "column 450 mm", "column 450 mm", "wall 400 mm")
+    record = spans(spans=spans_of, supports=supports, superimposed="3 kPa")
+    load = 1.25 * value(record, "loads/w_D1") + 1.5 * value(record, "loads/w_L1")
+
+    def said(entry_id: str, divisor: int) -> Verdict:
+        return said_of(record, entry_id, f"{load * 7.575**2 / divisor:.1f} kN.m")[0]
+
+    assert said("hog-1-right/M_f", 24) is Verdict.ORIGIN
+    assert said("sag-3/M_f", 11) is Verdict.OTHER_METHOD
+    assert said("sag-3/M_f", 14) is Verdict.ORIGIN
+    assert said("sag-1/M_f", 14) is Verdict.OTHER_METHOD
+
+
+def test_no_coefficients_where_the_calc_says_that_they_do_not_apply() -> None:
+    """Moments redistributed by 10 %: 9.2.4 goes out from an analysis, not from coefficients."""
+    record = flow.record_of(
+        spans=["8 m", "8 m", "8 m"], superimposed="3 kPa", redistribution={2: 10, 3: 10}
+    )
+    assert "coefficients/not-applicable" in record.entries
+    load = 1.25 * value(record, "loads/w_D2") + 1.5 * value(record, "loads/w_L2")
+    text = f"{load * 7.55**2 / 16:.1f} kN.m"
+    assert said_of(record, "sag-2/M_f", text)[0] is not Verdict.OTHER_METHOD
 
 
 def test_a_simple_span_moment_is_never_one(alike: Record) -> None:

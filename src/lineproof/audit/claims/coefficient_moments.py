@@ -22,8 +22,14 @@ from lineproof.standards.nbc.combinations import DEAD, LIVE
 
 _PART = re.compile(r"(?:sag-(?P<span>\d+)|(?:hog|shear)-(?P<at>\d+)-(?P<side>left|right))\Z")
 _CLEAR = re.compile(r"span-(\d+)\Z")
+_SUPPORT = re.compile(r"(\d+): an? (girder|column|wall)\b")
+"""How the record names what carries the beam at a support."""
+_NOT_APPLICABLE = "coefficients/not-applicable"
 _SINGLE = re.compile(r"[PQ]_|w_[DL]\d+_")
 _DEAD, _LIVE = float(DEAD), float(LIVE)
+_NEGATIVE_AT_END = {"girder": ("spandrel",), "column": ("column",), "wall": ()}
+"""By what the end is cast with; on a wall the beam rests freely."""
+_POSITIVE_AT_END = {"wall": ("unrestrained",)}
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,6 +38,7 @@ class _Beam:
 
     clear: tuple[Form, ...]
     load: tuple[Form, ...]
+    carriers: Mapping[int, str]
 
     @property
     def count(self) -> int:
@@ -67,7 +74,7 @@ def _beam(graph: Graph, used: Mapping[str, Form]) -> _Beam | None:
             return None
         clear.append(length)
         load.append(combined(lambda d, l: _DEAD * d + _LIVE * l, [dead, live]))
-    beam = _Beam(tuple(clear), tuple(load))
+    beam = _Beam(tuple(clear), tuple(load), _carriers(graph))
     return beam if count >= TWO and _regular(graph, beam) else None
 
 
@@ -75,8 +82,16 @@ def _regular(graph: Graph, beam: _Beam) -> bool:
     """Tell whether spans are alike and no single load stands on the beam."""
     lengths = [form.middle for form in beam.clear]
     alike = all(max(pair) <= LONGEST_RATIO * min(pair) for pair in pairwise(lengths))
+    if _NOT_APPLICABLE in graph.record.entries:  # as the calc itself has found
+        return False
     single = any(_SINGLE.match(node.symbol) for node in graph if node.part == "loads")
     return alike and not single
+
+
+def _carriers(graph: Graph) -> dict[int, str]:
+    """Return what carries the beam by support, as far as the record says it."""
+    said = str(graph.record.entries.get("given/supports", {}).get("text", ""))
+    return {int(found[1]): found[2] for found in _SUPPORT.finditer(said)}
 
 
 def _at(beam: _Beam, place: re.Match[str]) -> tuple[int, int]:
@@ -94,7 +109,10 @@ _Made = tuple[tuple[str, Interval], ...]
 def _positive(beam: _Beam, span: int) -> _Made:
     if not 1 <= span <= beam.count:
         return ()
-    kinds = ("unrestrained", "integral") if span in (1, beam.count) else ("interior",)
+    kinds: tuple[str, ...] = ("interior",)
+    if span in (1, beam.count):
+        carrier = beam.carriers.get(1 if span == 1 else beam.count + 1, "")
+        kinds = _POSITIVE_AT_END.get(carrier, ("unrestrained", "integral"))
     divisors = [POSITIVE[kind] for kind in kinds]
     return tuple(_moment(k, beam.load[span - 1], beam.clear[span - 1]) for k in divisors)
 
@@ -109,7 +127,8 @@ def _negative(beam: _Beam, place: re.Match[str]) -> _Made:
     first = support in (TWO, beam.count)
     outer = support in (1, beam.count + 1)
     if outer:
-        kinds: tuple[str, ...] = ("spandrel", "column")
+        carrier = beam.carriers.get(support, "")
+        kinds: tuple[str, ...] = _NEGATIVE_AT_END.get(carrier, ("spandrel", "column"))
     elif first and (beam.count == TWO or _outside(span, support, beam)):
         kinds = ("first, two spans",) if beam.count == TWO else ("first",)
     else:

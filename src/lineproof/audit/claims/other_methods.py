@@ -30,7 +30,8 @@ _SIMPLIFIED = {"beta": 0.18, "theta": 35.0}
 _SIMPLIFIED_YIELD, _SIMPLIFIED_CONCRETE = 400.0, 60.0
 _MODULI = ("E_c = 4500*sqrt(f_c)", "E_c = (3300*sqrt(f_c) + 6900)*(gamma_c/2300)**1.5")
 """A23.3, 8.6.2.3 and 8.6.2.2."""
-_MODULUS_CONCRETE = 40.0
+_MODULUS_LEAST, _MODULUS_CONCRETE = 20.0, 40.0
+"""Concrete of normal density of 20 to 40 MPa has the short expression (8.6.2.3)."""
 _WIDTHS = ("b", "b_f", "b_w")
 _TABLE_DECIMALS = 1
 _LEAST_READ = 1.0
@@ -112,6 +113,16 @@ class Bench:
                     return self.world.used[user.args[symbol]]
         return None
 
+    def meant(self, node: Node, part: str, symbol: str) -> list[Form]:
+        """Return the forms that a symbol has in a line and in a part, or of all in the calc.
+
+        Neither beta nor theta names the strengths that limit a method: V_c and V_s beside them do.
+        """
+        near = (n for n in self.graph if n.part == part or n.id == node.id)
+        ids = {n.args[symbol] for n in near if symbol in n.args}
+        ids = ids or {n.id for n in self.graph if n.has_value and n.symbol == symbol}
+        return [self.world.used[i] for i in ids]
+
 
 def other_ways(bench: Bench, node: Node) -> Iterator[Other]:
     """Give what every other way to a line's value gives; ways that do not apply give nothing."""
@@ -174,11 +185,11 @@ def _simplified(bench: Bench, node: Node) -> dict[str, Form]:
     """Return beta and theta of the simplified method where the record has the general one alone."""
     for part in _parts_above(bench, node, "beta", "theta"):
         beta = bench.graph.nodes.get(f"{part}/beta")
-        strengths = [bench.above(bench.graph[node.id], (s,)) for s in ("f_y", "f_c")]
-        limits = (_SIMPLIFIED_YIELD, _SIMPLIFIED_CONCRETE)
+        limits = (("f_y", _SIMPLIFIED_YIELD), ("f_c", _SIMPLIFIED_CONCRETE))
         within = all(
-            form is None or form.middle <= most
-            for form, most in zip(strengths, limits, strict=True)
+            form.middle <= most
+            for symbol, most in limits
+            for form in bench.meant(bench.graph[node.id], part, symbol)
         )
         with_stirrups = beta is not None and beta.kind == LINE and "s_ze" not in beta.args
         if within and with_stirrups:
@@ -205,7 +216,7 @@ def _modulus(bench: Bench, node: Node) -> Iterator[Other]:
     for part in _parts_above(bench, node, "E_c"):
         made = bench.graph[f"{part}/E_c"]
         strength = bench.above(made, ("f_c",))
-        if made.kind != LINE or strength is None or strength.middle > _MODULUS_CONCRETE:
+        if made.kind != LINE or strength is None:
             continue
         density = bench.world.used.get(made.args.get("gamma_c", "given/gamma_c"))
         recorded = str(made.entry["formula"]).replace(" ", "")
@@ -213,7 +224,7 @@ def _modulus(bench: Bench, node: Node) -> Iterator[Other]:
             if density is None:
                 continue
             forms, text, clause = [strength, density], _MODULI[1], "8.6.2.2"
-        elif recorded == _MODULI[1].replace(" ", ""):
+        elif recorded == _MODULI[1].replace(" ", "") and _is_normal(bench, part, strength):
             forms, text, clause = [strength], _MODULI[0], "8.6.2.3"
         else:
             continue
@@ -221,6 +232,12 @@ def _modulus(bench: Bench, node: Node) -> Iterator[Other]:
             f"follows with the modulus of elasticity by {clause}, which the standard allows as well"
         )
         yield from bench.by(node, {made.id: combined(_function(text), forms)}, sentence)
+
+
+def _is_normal(bench: Bench, part: str, strength: Form) -> bool:
+    """Tell whether the short expression of the modulus holds, which is of normal density only."""
+    factor = bench.world.used.get(f"{part}/lambda_", Form(1.0))
+    return factor.middle == 1 and _MODULUS_LEAST <= strength.middle <= _MODULUS_CONCRETE
 
 
 def _function(text: str) -> Callable[..., float]:
