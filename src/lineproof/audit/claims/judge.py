@@ -6,6 +6,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from itertools import chain
 
+from lineproof.audit.claims.bar_sizes import by_sizes
 from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
@@ -16,7 +17,7 @@ from lineproof.audit.claims.other_methods import Bench, Other, other_ways
 from lineproof.audit.claims.propagate import Worker
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
 from lineproof.audit.claims.rewritten import used_as_written, worked_rightly
-from lineproof.audit.claims.safe_side import errs_safely
+from lineproof.audit.claims.safe_side import SIDES, errs_safely
 from lineproof.audit.claims.sought import SlipFinder, Sought
 from lineproof.audit.claims.twins import twins_of
 from lineproof.audit.claims.worlds import (
@@ -39,7 +40,6 @@ MISWRITTEN = (Verdict.ORIGIN, Verdict.UNIT)
 _DIGITS = 4
 _MOVED = 1e-9
 _HABIT = "other numbers of the table are rounded so too"
-_SIDES = {True: "conservative", False: "not conservative", None: "no check is moved by it"}
 
 
 def judge(
@@ -112,8 +112,6 @@ class _Judge:
             judged = self._input(node, claim) if not node.is_computed else self._line(node, claim)
             self._note(node, judged)
             yield judged
-
-    # -- verdicts --------------------------------------------------------------------------
 
     def _not_claimed(self, node: Node) -> Judged:
         interval = self.worlds.claimed.used[node.id].interval
@@ -259,11 +257,9 @@ class _Judge:
         return tuple(i for i in causes if self.verdicts.get(i, Verdict.INPUT) in WRONG)
 
     def _unexplained(self, node: Node, claim: Claim, made: Judged) -> Judged:
-        if node.id in self.divided:
-            *others, total = self.divided[node.id]
-            note = f"with {self._named(others)} it makes the right {self._named([total])}"
-            note = f"{note}: another division of the same sum"
-            return replace(made, verdict=Verdict.OTHER_METHOD, note=note)
+        read = self._divided(node, made) or by_sizes(self.benches, node, claim, made)
+        if read is not None:
+            return read
         around = self.worlds.around(node)
         slip = unit_slip(claim, around)
         if slip is not None:
@@ -282,6 +278,14 @@ class _Judge:
             note = f"{self._turns(turned[-1])}, so that other expressions apply to this line"
             return replace(made, verdict=Verdict.UNKNOWN, note=note, causes=self._causes(node))
         return replace(made, verdict=Verdict.ORIGIN, slips=self._slips(node, claim))
+
+    def _divided(self, node: Node, made: Judged) -> Judged | None:
+        if node.id not in self.divided:
+            return None
+        *others, total = self.divided[node.id]
+        note = f"with {self._named(others)} it makes the right {self._named([total])}"
+        note = f"{note}: another division of the same sum"
+        return replace(made, verdict=Verdict.OTHER_METHOD, note=note)
 
     def _as_rounded(
         self, node: Node, claim: Claim, around: Sequence[Interval], judged: Judged
@@ -351,7 +355,7 @@ class _Judge:
         shown = self._shown(node, rounded.of, _DIGITS + 1)
         note = f"{shown} rounded {way} to a step of {told(rounded.step, claim.unit)}"
         verdict = Verdict.UNSAFE_ROUNDING if safe is False else Verdict.SAFE_ROUNDING
-        return replace(made, verdict=verdict, note=f"{note}: {_SIDES[safe]}")
+        return replace(made, verdict=verdict, note=f"{note}: {SIDES[safe]}")
 
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         return self.sought.slips(node, claim) if self.sought is not None else ()

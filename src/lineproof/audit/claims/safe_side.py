@@ -5,6 +5,9 @@ from __future__ import annotations
 from lineproof.audit.effects import UNSEEN
 from lineproof.audit.graph import Graph
 
+SIDES = {True: "conservative", False: "not conservative", None: "no check is moved by it"}
+"""What is said of the side to which a rounding errs."""
+
 
 def errs_safely(graph: Graph, entry_id: str, claimed: float, exact: float) -> bool | None:
     """Tell whether a claimed value in place of the exact one errs on the safe side.
