@@ -11,6 +11,7 @@ from lineproof.audit.claims.conventions import Convention, convention_of, in_our
 from lineproof.audit.claims.divided import divided_terms
 from lineproof.audit.claims.doubt import first_of, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
+from lineproof.audit.claims.in_steps import STEPS, in_steps
 from lineproof.audit.claims.mixed_digits import MixedDigits
 from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay
 from lineproof.audit.claims.other_methods import Bench, Other, other_ways
@@ -170,16 +171,20 @@ class _Judge:
         return self._following(node, made, bands, f"{FOLLOWS} {found[1]} digits")
 
     def _rounded_apart(self, node: Node, claim: Claim, made: Judged) -> Judged | None:
-        """Judge a line that rounding of each line above in its own way gives: asked beside a slip.
+        """Judge a line that rounding of its steps, or of lines above, each in its own way, gives.
 
-        Nothing where all that it rests on is claimed.
+        It is asked beside a slip.
         """
-        if not self.way.is_open(node):
-            return None
-        met = [self.mixed.met(bench.world, node, claim.stands_for) for bench in self.benches]
+        worlds, met = [bench.world for bench in self.benches], list[Interval | None]()
+        steps = [in_steps(self.worker, world, node, claim, self.claims) for world in worlds]
+        note = f"{STEPS} {steps[0][1]} digits" if steps[0] else f"{FOLLOWS} three digits or more"
+        if steps[0] is not None:
+            met = [each and each[0] for each in steps]
+        elif self.way.is_open(node):
+            met = [self.mixed.met(world, node, claim.stands_for) for world in worlds]
         if not any(met):
             return None
-        read = self._following(node, made, met, f"{FOLLOWS} three digits or more")
+        read = self._following(node, made, met, note)
         return read if read.verdict in WRONG else self._beside_a_slip(node, claim, read)
 
     def _following(
@@ -360,8 +365,6 @@ class _Judge:
     def _slips(self, node: Node, claim: Claim) -> tuple[Slip, ...]:
         return self.sought.slips(node, claim) if self.sought is not None else ()
 
-    # -- what later lines carry ------------------------------------------------------------
-
     def _causes(self, node: Node) -> tuple[str, ...]:
         found: set[str] = set()
         for target in node.args.values():
@@ -388,8 +391,6 @@ class _Judge:
         sound = self.worlds.sound.used[entry_id].middle
         others = (self.worlds.claimed.used[entry_id], self.worlds.twin.used[entry_id])
         return any(abs(form.middle - sound) > _MOVED * abs(sound) for form in others)
-
-    # -- words -----------------------------------------------------------------------------
 
     def _named(self, ids: Sequence[str]) -> str:
         return ", ".join(f"{self.graph[i].symbol} ({self.graph[i].label})" for i in ids)
