@@ -113,6 +113,13 @@ def test_wrong_arithmetic_is_named(source: str, words: str) -> None:
     assert one.severity is Severity.MAJOR
 
 
+def test_the_width_of_a_rectangle_is_that_of_its_tension_zone() -> None:
+    """10.5.1.2: b_t is b in a rectangle; in a T section it is b_w or a part of the flange."""
+    (one,) = findings("A_smin = 0.2*f_c**0.5*b*h/f_y", None)
+    assert "b in place of b_t; that is the same in a rectangle" in one.what
+    assert one.severity is Severity.OBSERVATION
+
+
 def test_the_density_factor_left_out_is_without_effect_in_normal_concrete() -> None:
     (one,) = findings("f_r = 0.6*math.sqrt(f_c)", None)
     assert "lambda is missing; without effect in concrete of normal density" in one.what

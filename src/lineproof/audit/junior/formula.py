@@ -27,6 +27,7 @@ _LEAST_DIGITS = 3
 _NO_EFFECT = 0.005
 _LONGEST_TEXT = 120
 _WITHOUT_DENSITY = "lambda is missing"
+_WIDTH_OF_RECTANGLE = "b in place of b_t"
 
 Lookup = Callable[[str], Node | None]
 
@@ -97,6 +98,9 @@ def _differs(hand: Hand, tree: Tree, met: Compared, nearest: Formula, find: Look
     elif said == _WITHOUT_DENSITY:
         severity = Severity.MINOR
         what += "; without effect in concrete of normal density, where it is 1"
+    elif said == _WIDTH_OF_RECTANGLE:
+        severity = Severity.OBSERVATION
+        what += "; that is the same in a rectangle; whether it is one is not shown"
     return finding(
         severity, what, hand.ids, clause, f"{nearest.text}: {nearest.title}; use the catalogue's"
     )  # fmt: skip
