@@ -151,6 +151,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "cutoff.CUT_AT_LOW_SHEAR": ({"V_f": 216, "V_r": 324.5}, {"V_f": 217, "V_r": 324.5}),
     "cutoff.CUT_AT_DOUBLE_AREA": ({"A_sr": 500, "A_co": 1000}, {"A_sr": 501, "A_co": 1000}),
     "cutoff.CUT_AT_MODERATE_SHEAR": ({"V_f": 243, "V_r": 324.5}, {"V_f": 244, "V_r": 324.5}),
+    "cutoff.CUT_OF_THIN_BARS": ({"d_b": 35.7}, {"d_b": 43.7}),  # 35M; 45M
     # 2000/3 = 667; 2000/4 = 500
     "cutoff.INTO_SIMPLE_SUPPORT": ({"A_s": 2000, "A_se": 1000}, {"A_s": 2000, "A_se": 600}),
     "cutoff.INTO_CONTINUOUS_SUPPORT": ({"A_s": 2000, "A_se": 500}, {"A_s": 2000, "A_se": 499}),

@@ -120,6 +120,10 @@ def test_end_in_the_tension_zone_by_hand() -> None:
     assert zone_at(weak, "bottom", 1, "left", 1750.0, [TWO]) == ""
     five = replace(TWO, number=5)
     assert zone_at(weak, "bottom", 1, "left", 1750.0, [five]) == "double area"
+    thick = [replace(TWO, size=size) for size in ("35M", "45M")]  # 12.10.5: up to 35M
+    assert zone_at(weak, "bottom", 1, "left", 1750.0, [five], thick[:1]) == "double area"
+    assert zone_at(weak, "bottom", 1, "left", 1750.0, [five], thick) == ""
+    assert zone_at(weak, "bottom", 1, "left", 2000.0, [five], thick) == "low shear"
     assert zone_at(replace(designed, shear=()), "bottom", 1, "left", 2000.0, [TWO]) == ""
     assert zone_at(designed, "top", 1, "left", 2000.0, [TWO]) == "compression"
 

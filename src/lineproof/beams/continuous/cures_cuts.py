@@ -81,16 +81,17 @@ def _longer(design: Design, cut: Cut) -> Cure:
     side, designed = cut.side, design.designed
     inward = side.face == "bottom"
     half, far = (f(designed, side.span, side.near) for f in (half_of, far_face))
-    going = side.continuing(cut.index)
+    going, ending = side.continuing(cut.index), side.cuts[cut.index].runs
 
     def use(changes: Mapping[str, float]) -> float:
         t = cut.t - changes["longer"] if inward else cut.t + changes["longer"]
         if inward and t <= half:
             return 0.0  # no longer cut: they run into the support
-        return 0.0 if zone_at(designed, side.face, side.span, side.near, t, going) else math.inf
+        zone = zone_at(designed, side.face, side.span, side.near, t, going, ending)
+        return 0.0 if zone else math.inf
 
     room = cut.t - half + STEP if inward else far - cut.t
-    bars = f"the {text_of(side.cuts[cut.index].runs)} that end here"
+    bars = f"the {text_of(ending)} that end here"
     (cure,) = find.cures(use, {"longer": find.longer(room, bars)})
     return cure
 

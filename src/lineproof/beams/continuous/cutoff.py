@@ -294,10 +294,26 @@ def continuing_length(
 
 
 def zone_at(
-    designed: Designed, face: Face, span: int, near: End, t: float, continuing: Sequence[BarRun]
+    designed: Designed,
+    face: Face,
+    span: int,
+    near: End,
+    t: float,
+    continuing: Sequence[BarRun],
+    ending: Sequence[BarRun] = (),
 ) -> Zone:
-    """Return by which rule of 12.10.5 bars may end at t, "" where they may not."""
-    return zones_at(designed, face, span, near, [t], continuing)[0]
+    """Return by which rule of 12.10.5 bars may end at t, "" where they may not.
+
+    ``ending`` are the bars that end, where they may be thicker than 35M: of these none end by the
+    double area of the others.
+    """
+    zone = zones_at(designed, face, span, near, [t], continuing)[0]
+    return "" if zone == "double area" and not thin(ending) else zone
+
+
+def thin(runs: Iterable[BarRun]) -> bool:
+    """Tell whether bars are thin enough to end by the double area of others (12.10.5)."""
+    return all(holds(clause.CUT_OF_THIN_BARS, d_b=run.diameter) for run in runs)
 
 
 def zones_at(

@@ -55,7 +55,7 @@ def record_ends_elsewhere(site: Site, runs: Runs, asked: Runs) -> None:
     for number, ending in enumerate(ends_elsewhere(designed, runs, side, asked), start=1):
         x = along(designed, side.span, side.near, ending.t)
         continuing = at_section(runs, "top", x)
-        zone = zone_at(designed, "top", side.span, side.near, ending.t, continuing)
+        zone = zone_at(designed, "top", side.span, side.near, ending.t, continuing, ending.runs)
         if zone != "compression":
             own = replace(site, title=f"{site.title}, {text_of(ending.runs)}")
-            record_zone(own, f"{site.key}-end-{number}", zone, ending.t, continuing)
+            record_zone(own, f"{site.key}-end-{number}", zone, ending, continuing)

@@ -15,9 +15,10 @@ from lineproof.beams.continuous.cutoff import (
     local,
     shear_in_tension,
     support_of,
+    thin,
     zone_at,
 )
-from lineproof.beams.continuous.cutoff_ends import Runs, SideOf
+from lineproof.beams.continuous.cutoff_ends import Ending, Runs, SideOf
 from lineproof.beams.continuous.cutoff_need import Need, need_of
 from lineproof.beams.continuous.cutoff_sets import (
     begin,
@@ -123,7 +124,9 @@ def _record_cut(site: Site, index: int) -> None:
     ending, continuing = side.cuts[index], side.continuing(index)
     key = cut_key(site.key, index)
     need = need_of(site.frame, side, index)
-    zone = zone_at(site.writers.designed, side.face, side.span, side.near, ending.t, continuing)
+    zone = zone_at(
+        site.writers.designed, side.face, side.span, side.near, ending.t, continuing, ending.runs
+    )
     going = f"{text_of(continuing)} going on" if continuing else "none going on"
     with sheet.part(key, f"{site.title}: {text_of(ending.runs)} cut, {going}"):
         if need is None:
@@ -133,15 +136,17 @@ def _record_cut(site: Site, index: int) -> None:
         if zone == "compression":
             _note_compression(site, ending.t)
     if zone != "compression":
-        record_zone(site, key, zone, ending.t, continuing)
+        record_zone(site, key, zone, ending, continuing)
 
 
-def record_zone(site: Site, key: str, zone: Zone, t: float, continuing: Sequence[BarRun]) -> None:
-    """Record by which rule of 12.10.5 bars end at t in the tension zone, "" for none."""
+def record_zone(
+    site: Site, key: str, zone: Zone, ending: Ending, continuing: Sequence[BarRun]
+) -> None:
+    """Record by which rule of 12.10.5 bars end in the tension zone, "" for none."""
     if zone == "double area":
-        _record_double_area(site, key, t, continuing)
+        _record_double_area(site, key, ending.t, continuing)
     else:
-        _record_low_shear(site, key, t)
+        _record_low_shear(site, key, ending)
 
 
 def _record_point(site: Site, index: int, need: Need) -> None:
@@ -261,9 +266,12 @@ def _rows_at(site: Site, t: float) -> tuple[int, int]:
     return int(M_face.argmax()), int(shear_in_tension(M_face, V).argmax())
 
 
-def _record_low_shear(site: Site, key: str, t: float) -> None:
+def _record_low_shear(site: Site, key: str, ending: Ending) -> None:
+    t = ending.t
     with site.writers.sheet.part(shear_key(key), f"{site.title}: end in the tension zone"):
         steps = _at_end(site, t, _rows_at(site, t)[1])
+        if not thin(ending.runs):
+            steps.decide(clause.CUT_OF_THIN_BARS, d_b=site.bar(thickest(ending.runs))["d_b"])
         if site.writers.designed.shear:
             _resisting(site, steps, t).check(clause.CUT_AT_LOW_SHEAR)
         else:

@@ -140,6 +140,16 @@ CUT_AT_MODERATE_SHEAR = _criterion(
     no="The shear is NOT low enough to cut bars here.",
     key="cut-moderate-shear",
 )
+CUT_OF_THIN_BARS = _criterion(
+    "d_b <= 35.7",
+    clause="12.10.5",
+    title="Cut in the tension zone: double area only for bars up to 35M",
+    basis=FROM_MEMORY,
+    numbers={"35.7": "mm"},
+    yes="The bars may end here where those that go on are doubled.",
+    no="Thicker than 35M: the bars may end here at low shear only, however many go on.",
+    key="cut-thin-bars",
+)
 
 INTO_SIMPLE_SUPPORT = _criterion(
     "A_s/3 <= A_se",
@@ -259,6 +269,7 @@ FORMULAS = (
 )  # fmt: skip
 CRITERIA = (
     EXTENDED, CONTINUES, SUFFICES, CUT_AT_LOW_SHEAR, CUT_AT_DOUBLE_AREA, CUT_AT_MODERATE_SHEAR,
+    CUT_OF_THIN_BARS,
     INTO_SIMPLE_SUPPORT, INTO_CONTINUOUS_SUPPORT, LENGTH_IN_SUPPORT, ANCHORED_LATERAL,
     DEVELOPED_AT_ZERO_MOMENT, TOP_PAST_INFLECTION, LONG_PAST_INFLECTION, RESTRAINED_END,
 )  # fmt: skip
