@@ -109,6 +109,12 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "superimposed": "2.7 kPa", "use": "office", "fire_rating": "1 h", "cover": "60 mm",
         "loads": [{"type": "D", "span": 1, "point": "90 kN", "at": "0.38 m", "what": "post"}],
     },
+    "a short end span beside a long one": {  # the beam ends before 12.10.4 lets top bars be cut
+        "spans": ["3.1 m", "9.3 m"], "supports": ["column 500 mm", "wall 400 mm", "wall 700 mm"],
+        "h": "850 mm", "b_w": "350 mm", "shape": "rectangular", "h_f": None, "spacing": "4.2 m",
+        "floor_weight": "4 kPa", "grade": "500R", "f_c": "37 MPa", "superimposed": "5.6 kPa",
+        "use": "storage area", "live_load": "10.2 kPa", "fire_rating": "1 h",
+    },
 }  # fmt: skip
 
 

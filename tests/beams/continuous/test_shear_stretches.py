@@ -9,6 +9,7 @@ import pytest
 
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.bars_counted import record_area
+from lineproof.beams.continuous.cutoff import Frame
 from lineproof.beams.continuous.detailing_data import SectionBars, ShearStretch, SupportTop
 from lineproof.beams.continuous.detailing_meeting import Reach, allowed
 from lineproof.beams.continuous.layout import BarRun
@@ -159,4 +160,4 @@ def test_bars_made_longer_end_where_a_tension_zone_allows_it() -> None:
 
     for shear, short in ((weak, 1750), (weak[:1], 3000)):
         there = replace(designed, shear=tuple(shear))
-        assert allowed(there, 2, "right", (), found) == Reach(3000, short)
+        assert allowed(Frame.of(there), 2, "right", (), found) == Reach(3000, short)

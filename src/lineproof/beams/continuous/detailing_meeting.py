@@ -12,9 +12,13 @@ from lineproof.beams.continuous.anchorage import (
 )
 from lineproof.beams.continuous.cutoff import (
     STEP,
+    Frame,
     ceil50,
+    continuing_length,
     far_face,
+    full_moment,
     half_of,
+    no_further_need,
     support_of,
     zones_at,
 )
@@ -66,19 +70,34 @@ def with_restraint(
 
 
 def allowed(
-    designed: Designed, support: int, side: End, continuing: Sequence[BarRun], found: Reach
+    frame: Frame, support: int, side: End, continuing: Sequence[BarRun], found: Reach
 ) -> Reach:
     """Return a reach with the short bars as far as they may end in a tension zone (12.10.5).
 
-    Bars made longer for another reason may have left the place that was found for their end.
+    Bars made longer for another reason may have left the place that was found for their end. Where
+    the beam ends before the long bars are as long as 12.10.4 asks, all run to its end.
     """
+    designed, span = frame.designed, support - 1 if side == "left" else support
+    if _too_near_the_end(frame, span, other(side), continuing):
+        end = furthest(designed, span, other(side))
+        return replace(found, long=end, short=end)
     places = [found.short]
     while places[-1] + STEP < found.long:
         places.append(places[-1] + STEP)
-    span = support - 1 if side == "left" else support
     zones = zones_at(designed, "top", span, other(side), places, continuing)
     short = next((t for t, zone in zip(places, zones, strict=True) if zone), found.long)
     return replace(found, short=short)
+
+
+def _too_near_the_end(frame: Frame, span: int, near: End, continuing: Sequence[BarRun]) -> bool:
+    """Tell whether the beam ends before bars that go on past a cut are long enough (12.10.4)."""
+    designed = frame.designed
+    M_r = full_moment(designed, "top", span, continuing)
+    point = no_further_need(frame, "top", span, near, M_r)
+    if point is None or point.t <= half_of(designed, span, near):
+        return False  # no bars are cut in the span, or those that are serve the one behind
+    past = continuing_length(designed, "top", span, near, continuing)
+    return point.t + past > furthest(designed, span, near)
 
 
 def furthest(designed: Designed, span: int, near: End) -> float:

@@ -98,7 +98,7 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
         groups = groups_of(designed, support)
         continuing = groups[: long_of(groups)]
         for side, found in each.items():
-            each[side] = allowed(designed, support, side, continuing, found)
+            each[side] = allowed(frame, support, side, continuing, found)
     rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
     corners = {support: row[0] for support, row in rows.items() if row}
     others = others_through(designed, rows)
