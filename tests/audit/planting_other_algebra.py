@@ -10,22 +10,21 @@ from __future__ import annotations
 
 import math
 from collections import Counter
-from collections.abc import Callable, Iterable, Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator
 from random import Random
 
 from lineproof.audit.claims.blank import quick_lines
 from lineproof.audit.claims.judge import judge
-from lineproof.audit.data import Claim, Judged, read_from
+from lineproof.audit.data import Judged
 from lineproof.audit.graph import Graph, Node
 from lineproof.audit.slips.search import find_slips
 from lineproof.quantity.digits import significant
-from lineproof.quantity.units import internal_factor
 
 from .planting_beams import BEAMS, beam
+from .planting_by_hand import Values, claim, sheet
 
 Pad = Callable[[float], float]
 """Writes a step down: the number with so many digits."""
-Values = Mapping[str, float]
 Route = Callable[[Pad, Values], float]
 
 
@@ -130,18 +129,7 @@ ROUTES: dict[str, tuple[Route, ...]] = {
 def worked(graph: Graph, steps: int, digits: int, seed: int) -> dict[str, str]:
     """Return a sheet as texts by id: steps with so many digits, lines as well, each carried on."""
     draw = Random(seed)  # noqa: S311 - the same routes every time
-    values, texts = dict(graph.stored), dict[str, str]()
-    for node in graph:
-        if not node.has_value:
-            continue
-        factor = internal_factor(node.unit)
-        if not node.is_computed:
-            texts[node.id] = f"{values[node.id] / factor:.10g}"
-            continue
-        made = _worked(graph, node, values, steps, draw)
-        number = significant(made / factor, digits)
-        texts[node.id], values[node.id] = f"{number:f}", float(number) * factor
-    return texts
+    return sheet(graph, lambda node, values: (_worked(graph, node, values, steps, draw), digits))
 
 
 def _worked(graph: Graph, node: Node, values: Values, steps: int, draw: Random) -> float:
@@ -168,15 +156,9 @@ def said_of(
         graph = beam(number)
         texts = worked(graph, steps, digits, number)
         ids = list(texts) if full else quick_lines(graph)
-        for each in judge(graph, [_claim(graph, i, texts[i]) for i in ids], find_slips):
+        for each in judge(graph, [claim(graph, i, texts[i]) for i in ids], find_slips):
             if each.claim is not None:
                 yield number, each
-
-
-def _claim(graph: Graph, entry_id: str, text: str) -> Claim:
-    unit = graph[entry_id].unit
-    factor = internal_factor(unit)
-    return Claim(entry_id, text, unit, float(text) * factor, read_from(text).times(factor))
 
 
 if __name__ == "__main__":

@@ -6,6 +6,7 @@ in steps, each rounded as its comment says.
 
 from __future__ import annotations
 
+import pytest
 from tests.audit.hand import GIVENS, judged, sheet_of
 
 from lineproof.audit.data import Judged, Verdict
@@ -21,43 +22,37 @@ def said(lines: dict[str, str], givens: dict[str, str], text: str) -> Judged:
 FOLLOWS = "follows where the steps of the line are rounded to 3 digits"
 
 
-def test_a_root_and_a_ratio_written_down_first() -> None:
-    """sqrt(29) = 5.385 = 5.39; 0.2 x 5.39/500 = 0.002156 = 0.00216; x 430 x 830 = 770.9 = 771 mm2.
-
-    By all digits 0.2 x 5.38516/500 x 356 900 = 768.8.
-    """
-    lines = {"A_smin = 0.2*sqrt(f_c*f_o)*b*h/f_y": "mm2"}
-    givens = {"f_c": "29 MPa", "f_o": "1 MPa", "f_y": "500 MPa", "b": "430 mm", "h": "830 mm"}
-
-    found = said(lines, givens, "771 mm2")
+@pytest.mark.parametrize(
+    ("line", "unit", "typed", "in_steps", "wrong"),
+    [
+        # sqrt(29) = 5.385 = 5.39; 0.2 x 5.39/500 = 0.002156 = 0.00216; x 430 x 830 = 770.9 mm2.
+        # By all digits 0.2 x 5.38516/500 x 356 900 = 768.8.
+        (
+            "A_smin = 0.2*sqrt(f_c*f_o)*b*h/f_y", "mm2",
+            {"f_c": "29 MPa", "f_o": "1 MPa", "f_y": "500 MPa", "b": "430 mm", "h": "830 mm"},
+            "771 mm2", "775 mm2",
+        ),
+        # T = 0.85 x 2928 x 400 = 995.52 = 996 kN; 0.8 x 0.65 x 30 x 644 = 10 046 = 10 000 N/mm:
+        # 996/10.0 = 99.6 mm. By all digits 995 520/10 046.4 = 99.09.
+        (
+            "a = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)", "mm",
+            {"A_s": "2928 mm2", "alpha_1": "0.8", "b": "644 mm"}, "99.6 mm", "98.5 mm",
+        ),
+        # T = 0.85 x 2955 x 400 = 1004.7 = 1000 kN; 471.3 - 66.5/2 = 438.05 = 438 mm: 438 kN.m.
+        # By all digits 1004.7 x 0.43805 = 440.1.
+        (
+            "M_r = phi_s*A_s*f_y*(d - a/2)", "kN.m",
+            {"A_s": "2955 mm2", "d": "471.3 mm", "a": "66.5 mm"}, "438 kN.m", "436 kN.m",
+        ),
+    ],
+    ids=["a root and a ratio", "a force and what it is divided by", "a force and an arm"],
+)  # fmt: skip
+def test_steps_written_down_first(
+    line: str, unit: str, typed: dict[str, str], in_steps: str, wrong: str
+) -> None:
+    found = said({line: unit}, typed, in_steps)
     assert (found.verdict, found.note) == (Verdict.AGREES, FOLLOWS)
-    assert said(lines, givens, "775 mm2").verdict is Verdict.ORIGIN
-
-
-def test_a_force_and_what_it_is_divided_by_written_down_first() -> None:
-    """T = 0.85 x 2928 x 400 = 995.52 = 996 kN; 0.8 x 0.65 x 30 x 644 = 10 046 = 10 000 N/mm.
-
-    996/10.0 = 99.6 mm; by all digits 995 520/10 046.4 = 99.09.
-    """
-    lines = {"a = phi_s*A_s*f_y/(alpha_1*phi_c*f_c*b)": "mm"}
-    givens = {"A_s": "2928 mm2", "alpha_1": "0.8", "b": "644 mm"}
-
-    found = said(lines, givens, "99.6 mm")
-    assert (found.verdict, found.note) == (Verdict.AGREES, FOLLOWS)
-    assert said(lines, givens, "98.5 mm").verdict is Verdict.ORIGIN
-
-
-def test_a_force_and_an_arm_written_down_first() -> None:
-    """T = 0.85 x 2955 x 400 = 1004.7 = 1000 kN; 471.3 - 66.5/2 = 438.05 = 438 mm: 438 kN.m.
-
-    By all digits 1004.7 x 0.43805 = 440.1.
-    """
-    lines = {"M_r = phi_s*A_s*f_y*(d - a/2)": "kN.m"}
-    givens = {"A_s": "2955 mm2", "d": "471.3 mm", "a": "66.5 mm"}
-
-    found = said(lines, givens, "438 kN.m")
-    assert (found.verdict, found.note) == (Verdict.AGREES, FOLLOWS)
-    assert said(lines, givens, "436 kN.m").verdict is Verdict.ORIGIN
+    assert said({line: unit}, typed, wrong).verdict is Verdict.ORIGIN
 
 
 def test_what_a_likely_slip_gives_as_well_is_doubtful() -> None:
