@@ -288,7 +288,7 @@ def floor_beam(
     """
     given: dict[str, Any] = dict(locals())
     inputs, pair = read_floor_beam(given, sheet.project)
-    sheet.typed = deepcopy({name: value for name, value in given.items() if name != "sheet"})
+    keep_typed(sheet, given)
     return _start(sheet, inputs, pair)
 
 
@@ -317,6 +317,11 @@ def not_covered(inputs: FloorBeamInputs) -> list[Mapping[str, str]]:
     if inputs.compression_bars is not None:
         rows.append({"check": "Ties of the compression bars", "clause": "7.6.5"})
     return rows
+
+
+def keep_typed(sheet: Sheet, given: Mapping[str, Any]) -> None:
+    """Keep the inputs of a start call as typed, by name; lists may be changed in place later."""
+    sheet.typed = deepcopy({name: value for name, value in given.items() if name != "sheet"})
 
 
 def prepare(sheet: Sheet, pair: CodePair) -> None:

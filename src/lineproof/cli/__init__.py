@@ -6,7 +6,6 @@ Exit codes: 0 done; 1 a check does not hold or a finding; 2 wrong input.
 from __future__ import annotations
 
 import argparse
-import difflib
 import os
 import sys
 from collections.abc import Sequence
@@ -224,6 +223,8 @@ def _parsed(made: argparse.ArgumentParser, arguments: Sequence[str] | None) -> a
     options, left = made.parse_known_args(arguments)
     if not left:
         return options
+    import difflib  # noqa: PLC0415 - only where something is wrong
+
     own = _names_of(options.own)
     faults = []
     for word in left:

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
-from copy import deepcopy
 from dataclasses import replace
 from typing import Any
 
@@ -45,7 +44,7 @@ from lineproof.beams.continuous.resistance_cover import COVERAGE, Gap, covered
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
-from lineproof.beams.floor_beam import prepare
+from lineproof.beams.floor_beam import keep_typed, prepare
 from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.record import Part
@@ -283,7 +282,7 @@ def continuous_beam(
     """
     given: dict[str, Any] = dict(locals())
     inputs, pair = read_inputs(given, sheet.project)
-    sheet.typed = deepcopy({name: value for name, value in given.items() if name != "sheet"})
+    keep_typed(sheet, given)
     _begin(sheet, f"{inputs!r} {pair!r}", anew=inputs.forces_file is not None)
     prepare(sheet, pair)
     sheet.member = member_of(inputs)

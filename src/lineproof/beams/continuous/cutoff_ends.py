@@ -33,7 +33,7 @@ _INSIDE = 1.0
 
 @dataclass(frozen=True, slots=True)
 class Ending:
-    """Bars of one section that end at one distance ``t`` from the near axis."""
+    """Bars of one section that end at one distance ``t`` [mm] from the near axis."""
 
     t: float
     runs: Runs

@@ -84,23 +84,23 @@ def section_at(
     left, right = _names(steel, circles, flange, sides, all_left=shape.kind == "rectangle")
     note = f"At {x:.0f} mm from the axis of support 1. Scale 1 : {1 / shown.scale:g}"
     note += ", flange shortened." if shown.shortened else "."
-    sheet = _paper(shape, shown, left, right, text_width(words(note), NOTE) + 2.0)
-    under = ((sheet.width / 2 - sheet.margin) / shown.scale, (3.0 - sheet.below) / shown.scale)
+    paper = _paper(shape, shown, left, right, text_width(words(note), NOTE) + 2.0)
+    under = ((paper.width / 2 - paper.margin) / shown.scale, (3.0 - paper.below) / shown.scale)
     shapes: list[Shape] = [
         *outline(shape, shown, goes_on=True),
         *stirrup_shapes(steel),
         *(circle for _, circle in (*circles, *flange, *sides)),
-        *_dimensions(shape, shown, steel, sheet.first, tension, [c for _, c in circles]),
+        *_dimensions(shape, shown, steel, paper.first, tension, [c for _, c in circles]),
         *_callouts(shape, shown, left, way=-1.0),
         *_callouts(shape, shown, right, way=1.0),
         Text(under, words(note), "text", NOTE),
     ]
     name = title or f"Section {letter}".strip()
     return Figure(
-        round(sheet.width, 1),
-        round(shape.h * shown.scale + sheet.below + sheet.above, 1),
+        round(paper.width, 1),
+        round(shape.h * shown.scale + paper.below + paper.above, 1),
         shown.scale,
-        (round(sheet.margin, 3), round(sheet.below, 3)),
+        (round(paper.margin, 3), round(paper.below, 3)),
         tuple(shapes),
         _alt(name, x, shape, steel),
         name,

@@ -96,9 +96,7 @@ class SpanDemand:
 
 def stretch_at(designed: Designed, x: float) -> ShearStretch:
     """Return the shear resistance at a place: where stretches meet, the weaker."""
-    start, end, rank = designed.shear_table
-    met = np.flatnonzero((start - SAME_PLACE <= x) & (x <= end + SAME_PLACE))
-    return designed.shear[met[rank[met].argmin()]] if len(met) else NO_SHEAR
+    return stretches_at(designed, np.array([x]))[0]
 
 
 def stretches_at(designed: Designed, x: Floats) -> list[ShearStretch]:
