@@ -142,7 +142,7 @@ def _record_cut(site: Site, index: int) -> None:
 def record_zone(
     site: Site, key: str, zone: Zone, ending: Ending, continuing: Sequence[BarRun]
 ) -> None:
-    """Record by which rule of 12.10.5 bars end in the tension zone, "" for none (a failing check)."""
+    """Record the rule of 12.10.5 by which bars end in the tension zone; for "" a failing check."""
     if zone == "double area":
         _record_double_area(site, key, ending.t, continuing)
     else:
