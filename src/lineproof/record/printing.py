@@ -38,6 +38,8 @@ MOST_PASSES = 24
 """Passes of printing at most; the demo beam settles in eight."""
 _RESIDUAL = 0.01
 """Share of the other side below which a side is but the residual of nearly equal numbers."""
+_LAST_BITS = 1e-11
+"""Part of the largest of its terms below which a sum is nothing but rounding."""
 _LEAST_FOUND = 4
 """Digits that a found value shows at least."""
 
@@ -264,7 +266,7 @@ class Printer:
         target = system_unit(unit, made.system)
         arguments = self._arguments(entry.args)
         wanted = self._wanted.get(id(entry), 0)
-        chosen = _choose(made, arguments, entry.value, unit, wanted)
+        chosen = _choose(made, arguments, entry.value, unit, wanted, _left_over(entry))
         coherent = chosen.result
         if power_of_ten(unit, target) is None:
             # The result in two unlike units: both must follow from the printed arguments.
@@ -319,6 +321,19 @@ def _residual_decimals(value: float, other: float) -> int | None:
     return min(max(0, -math.floor(math.log10(abs(other)))), MOST_DECIMALS)
 
 
+def _left_over(entry: Entry) -> int | None:
+    """Return the decimals of a line of which equal terms leave but the rounding of their last bits.
+
+    Its digits mean nothing, and another processor has others.
+    """
+    kind, scale = UNITS[entry.unit].kind, internal_factor(entry.unit)
+    alike = (abs(arg.value) for arg in entry.args if UNITS[arg.unit].kind == kind)
+    largest = max(alike, default=0.0)
+    if not 0 < abs(entry.value) < _LAST_BITS * largest:
+        return None
+    return _residual_decimals(entry.value / scale, largest / scale)
+
+
 def _shown_digits(exact: Decimal, entry: Entry, unit: str) -> int:
     """Return the digits of an exact value in a unit, zeros before the point included: 140, 30."""
     text = entry.source.typed.number if entry.unit == unit else ""
@@ -329,12 +344,18 @@ def _shown_digits(exact: Decimal, entry: Entry, unit: str) -> int:
 
 
 def _choose(
-    made: Formula, arguments: Sequence[Argument], value: float, unit: str, wanted: int = 0
+    made: Formula,
+    arguments: Sequence[Argument],
+    value: float,
+    unit: str,
+    wanted: int = 0,
+    decimals: int | None = None,
 ) -> Chosen:
     scale = internal_factor(unit)
     return choose_digits(
         lambda *numbers: made.function(*numbers) / scale,
-        arguments, value / scale, unit, wanted=wanted, rounded=_rounding(value, unit),
+        arguments, value / scale, unit, wanted=wanted, decimals=decimals,
+        rounded=_rounding(value, unit),
     )  # fmt: skip
 
 

@@ -9,6 +9,7 @@ from lineproof.beams.continuous.anchorage import tie_spacing
 from lineproof.beams.continuous.cutoff_support import OUTSIDE
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.model import ANALYSIS, Model
+from lineproof.beams.continuous.resistance_demand import NOTHING
 from lineproof.beams.continuous.summary_tables import NONE, Row, printed
 from lineproof.beams.continuous.support_turning import TORQUES
 from lineproof.beams.continuous.symbols import KINDS, code
@@ -49,7 +50,7 @@ def turning_table(model: Model) -> tuple[list[str], list[Row]]:
         found = [entries.get(mark.format(j)) for mark, _ in kept]
         there = [entry for entry in found if entry is not None]
         if there:
-            cells = (NONE if entry is None else printed(entry.value, "kN.m") for entry in found)
+            cells = (NONE if entry is None else _moment(entry.value) for entry in found)
             rows.append(Row((str(j), model.inputs.supports[j - 1].carrier, *cells), there[-1]))
     return ["Support", "On", *(words for _, words in kept)], rows
 
@@ -63,6 +64,11 @@ def _hangers(design: Design, number: int) -> Iterator[Row]:
             f"legs, besides the stirrups of the beam{ties}"
         )
         yield Row((str(number), text), made[shear_bars.HANGERS_PROVIDED.key])
+
+
+def _moment(value: float) -> str:
+    """Print a moment [N.mm] in kN.m; what equal moments of both spans leave is 0."""
+    return printed(0.0 if abs(value) <= NOTHING else value, "kN.m")
 
 
 def _tied(design: Design, number: int) -> bool:

@@ -11,6 +11,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.continuous.groups import Group, ends_at, moment_name, named, where
 from lineproof.beams.continuous.model import Model
+from lineproof.beams.continuous.resistance_demand import NOTHING
 from lineproof.beams.continuous.symbols import KINDS, code, notation, numbered, stated, subscript
 from lineproof.beams.continuous.torsion_record import torque_symbol
 from lineproof.formula import Symbol
@@ -79,7 +80,7 @@ def _record_extremes(model: Model, kind: str, scopes: Mapping[Group, object], su
     entries = model.sheet.part_entries
     names = [f"M_c{support}{group.code}" for group in scopes if group.kind == kind]
     for mark, sign, most in (("", 1.0, "Largest"), ("m", -1.0, "Smallest")):
-        terms = [name for name in names if name in entries and sign * entries[name].value > 0]
+        terms = [n for n in names if n in entries and sign * entries[n].value > NOTHING]
         if terms:
             text = f"M_c{mark}{support}{code(kind)} = {' + '.join(terms)}"
             title = f"{most} moment on support {support}, {KINDS[kind]}, unfactored"
