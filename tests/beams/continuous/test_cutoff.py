@@ -8,6 +8,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
+from lineproof.beams.analysis.model import PointLoad, UniformLoad
 from lineproof.beams.bars import BarLayer
 from lineproof.beams.continuous.cutoff import (
     Frame,
@@ -22,7 +23,8 @@ from lineproof.beams.continuous.cutoff import (
 from lineproof.beams.continuous.cutoff_ends import (
     at_section,
     bottom_side,
-    inflection,
+    governing_inflection,
+    inflections,
     passes,
     top_side,
 )
@@ -34,6 +36,7 @@ from lineproof.beams.continuous.detailing_data import (
     SupportTop,
 )
 from lineproof.beams.continuous.detailing_top import groups_of, long_of
+from lineproof.beams.continuous.forces import Forces
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.standards.a23_3 import cutoff as clause
 
@@ -152,11 +155,32 @@ def test_check_12c() -> None:
 
 def test_inflection_of_the_bottom_bars_by_hand() -> None:
     """8 m fixed: zero moment at 1690.6 mm, V = 40 x (4 - 1.6906) = 92.4 kN."""
-    found = inflection(fixed_beam(), 1, "right")
-    assert found is not None
+    (found,) = inflections(fixed_beam(), 1, "right")
     assert found.t == pytest.approx(1690.6, abs=1)
     assert pytest.approx(92.4e3, rel=1e-3) == found.V
-    assert inflection(simple_beam(), 1, "left") is None
+    assert inflections(simple_beam(), 1, "left") == ()
+
+
+def test_less_shear_nearer_to_the_support_can_govern() -> None:
+    """8 m fixed, D = 200 kN/m and L = 200 kN at midspan; bars end at 1600 mm from the axis.
+
+    1.4 D: 0 = -280 x 64/12 + 1120 x - 140 x2: x = 1.6906 m, V = 280 x (4 - 1.6906) = 646.6 kN.
+    1.25 D + 1.5 L: 0 = -250 x 64/12 - 300 + (1000 + 150) x - 125 x2: x = 1.7551 m and
+    V = 250 x (4 - 1.7551) + 150 = 711.2 kN. The bars reach 90.6 mm past the first point, 155.1 mm
+    past the second one: M_r/646.6 + 90.6 is less than M_r/711.2 + 155.1 up to 459 kN.m.
+    """
+    bare = fixed_beam()
+    loads = (UniformLoad("D", 1, 200.0), PointLoad("L", 1, 200e3, 4000.0))
+    heavy = replace(bare, forces=Forces.of(bare.forces.beam, loads))
+    first, second = inflections(heavy, 1, "left")
+    assert (first.t, second.t) == (1755, 1691)
+    assert pytest.approx((711.2, 646.6), abs=0.3) == (first.V / 1e3, second.V / 1e3)
+    thin = BarRun("bottom", 1, 2, "15M", 1600.0, 6400.0)
+    found = governing_inflection(heavy, 1, "left", (thin,), 1600.0)
+    assert found is not None
+    assert found.point == second
+    M_r = full_moment(heavy, "bottom", 1, [thin])
+    assert found.longest == pytest.approx(M_r / second.V + 91, abs=0.5)
 
 
 def test_ends_are_read_from_the_runs() -> None:

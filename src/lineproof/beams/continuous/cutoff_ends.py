@@ -228,24 +228,60 @@ class Inflection:
     V: float
 
 
-def inflection(designed: Designed, span: int, near: End, count: int = 101) -> Inflection | None:
-    """Return the point of inflection near a support with the largest shear, on a whole mm.
+def inflections(
+    designed: Designed, span: int, near: End, count: int = 101
+) -> tuple[Inflection, ...]:
+    """Return the points of inflection near a support that can govern, on whole mm.
 
-    None where no case bends the beam the other way at that support.
+    Those with the largest shear first; a case with less shear counts where its point is nearer
+    to the support. None where no case bends the beam the other way at that support.
     """
     t = np.linspace(half_of(designed, span, near), far_face(designed, span, near), count)
-    M, V = designed.forces.along(span, local(designed, span, near, t))
-    turns = (M[:, :-1] <= NOTHING) & (M[:, 1:] > NOTHING)
-    rows, places = np.nonzero(turns)
-    if not len(rows):
+    M = designed.forces.moments(span, local(designed, span, near, t))
+    rows, at = np.nonzero((M[:, :-1] <= NOTHING) & (M[:, 1:] > NOTHING))
+    below, above = np.minimum(M[rows, at], 0.0), M[rows, at + 1]
+    places = np.round(t[at] - below / (above - below) * (t[at + 1] - t[at]))
+    stations, station = np.unique(places, return_inverse=True)
+    V = np.abs(designed.forces.shears(span, local(designed, span, near, stations), near))
+    found = (
+        Inflection(float(place), int(row), float(V[row, column]))
+        for row, place, column in zip(rows, places, station, strict=True)
+    )
+    kept: list[Inflection] = []
+    for point in sorted(found, key=lambda point: (-round(point.V), point.t)):
+        if not kept or point.t < kept[-1].t:
+            kept.append(point)
+    return tuple(kept)
+
+
+@dataclass(frozen=True, slots=True)
+class AtInflection:
+    """The point of inflection that allows the shortest development, and that length [mm]."""
+
+    point: Inflection
+    longest: float
+
+
+def governing_inflection(
+    designed: Designed, span: int, near: End, inside: Sequence[BarRun], t_end: float
+) -> AtInflection | None:
+    """Return the point of inflection near a support that governs 12.11.3 for bottom bars.
+
+    ``inside`` run into the support and end ``t_end`` [mm] from its axis. None where there is no
+    point of inflection.
+    """
+    points = inflections(designed, span, near)
+    if not points:
         return None
-    most = np.abs(V[rows, places]).argmax()
-    row, at = int(rows[most]), int(places[most])
-    below, above = M[row, at], M[row, at + 1]
-    part = float(-min(below, 0.0) / (above - min(below, 0.0)))
-    place = float(round(float(t[at] + part * (t[at + 1] - t[at]))))
-    _, V_there = designed.forces.pairs(span, local(designed, span, near, place))
-    return Inflection(place, row, abs(float(V_there[row])))
+    d_b = max(run.diameter for run in inside)
+    d, _ = depths(designed, "bottom", span, near)
+    M_r = full_moment(designed, "bottom", span, inside)
+    limits = []
+    for point in points:
+        l_ext = value(clause.PAST_INWARD, x_t=point.t, x_e=t_end)
+        l_a = value(clause.PAST_INFLECTION, l_ext=l_ext, d=d, d_b=d_b)
+        limits.append(AtInflection(point, value(clause.LIMIT, M_r=M_r, V_f=point.V, l_a=l_a)))
+    return min(limits, key=lambda limit: round(limit.longest, 3))
 
 
 def held_at_zero(
@@ -255,15 +291,8 @@ def held_at_zero(
 
     ``inside`` run into the support and end ``t_end`` [mm] from its axis.
     """
-    point = inflection(designed, span, near)
-    if point is None:
+    found = governing_inflection(designed, span, near, inside, t_end)
+    if found is None:
         return True
-    d_b = max(run.diameter for run in inside)
-    l_ext = value(clause.PAST_INWARD, x_t=point.t, x_e=t_end)
-    d, _ = depths(designed, "bottom", span, near)
-    longest = value(
-        clause.LIMIT, M_r=full_moment(designed, "bottom", span, inside), V_f=point.V,
-        l_a=value(clause.PAST_INFLECTION, l_ext=l_ext, d=d, d_b=d_b),
-    )  # fmt: skip
     lengths = (development_length(designed, replace(run, start=0.0, end=1.0)) for run in inside)
-    return max(lengths) <= longest
+    return max(lengths) <= found.longest

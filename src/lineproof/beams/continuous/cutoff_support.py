@@ -16,7 +16,7 @@ from lineproof.beams.continuous.cutoff import (
     no_further_need,
     support_of,
 )
-from lineproof.beams.continuous.cutoff_ends import Runs, inflection, tip
+from lineproof.beams.continuous.cutoff_ends import Runs, governing_inflection, tip
 from lineproof.beams.continuous.cutoff_record import INFLECTION, ZERO_AT_AXIS, Site, thickest
 from lineproof.beams.continuous.cutoff_sets import (
     begin,
@@ -126,8 +126,8 @@ def record_zero_moment(site: Site, hooked: Hooks) -> None:
     if designed.exterior(support) and designed.outline.supports[support - 1].kind == "simple":
         _record_simple(site, support, hooked)
         return
-    point = inflection(designed, side.span, side.near)
-    if point is None:
+    found = governing_inflection(designed, side.span, side.near, side.kept, side.t_kept)
+    if found is None:
         title = f"{site.title}: no point of inflection near support {support}"
         with site.writers.sheet.part(f"{site.key}-zero", title):
             site.writers.sheet.note(
@@ -137,6 +137,7 @@ def record_zero_moment(site: Site, hooked: Hooks) -> None:
     title = f"{site.title}: at the point of inflection near support {support}"
     with site.writers.sheet.part(f"{site.key}-zero", title):
         steps = _kept(site)
+        point = found.point
         steps.bind(x_t=site.given("x_t", point.t, "found along the span", INFLECTION))
         demand = site.demand(point.t, point.row)
         site.writers.forces(steps, demand, side.near, steps.entry("x_t"))
