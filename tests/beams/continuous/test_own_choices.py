@@ -115,6 +115,35 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "floor_weight": "4 kPa", "grade": "500R", "f_c": "37 MPa", "superimposed": "5.6 kPa",
         "use": "storage area", "live_load": "10.2 kPa", "fire_rating": "1 h",
     },
+    "bars that end inside the next short span, hogging throughout": {  # 12.10.5 at their ends
+        "spans": ["8.6 m", "3.9 m", "8.4 m", "3.5 m"], "h": "720 mm", "b_w": "310 mm",
+        "shear_method": "general", "project": {"codes": {"pair": "NBC 2020 + A23.3:19"}},
+        "supports": ["column 400 mm", "girder 700 mm", "wall 500 mm", "girder 700 mm", GIRDER],
+        "h_f": "180 mm", "spacing": "3.5 m", "f_c": "29 MPa", "grade": "400R",
+        "superimposed": "1.8 kPa", "use": "storage area", "live_load": "13.6 kPa",
+        "slab_bars": "2 x 15M at 250 mm", "fire_rating": "1 h", "exposure": "N", "cover": "40 mm",
+    },
+    "bars that end inside a span that hogs throughout": {
+        "spans": ["8.1 m", "7 m", "3.5 m"], "h": "620 mm", "b_w": "320 mm", "h_f": "180 mm",
+        "supports": ["wall 600 mm", "column 400 mm", "column 600 mm", "wall 400 mm"],
+        "spacing": "4.2 m", "f_c": "36 MPa", "grade": "500R", "superimposed": "3.0 kPa",
+        "use": "storage area", "live_load": "11.1 kPa", "slab_bars": "2 x 15M at 250 mm",
+        "fire_rating": "1 h",
+    },
+    "bars that end between the faces of the next support": {  # no section in shear stands there
+        "spans": ["8 m", "3.5 m", "4.4 m", "2.6 m"], "h": "890 mm", "b_w": "310 mm",
+        "supports": ["wall 600 mm", "wall 500 mm", "column 700 mm", "girder 700 mm", COLUMN],
+        "h_f": "180 mm", "spacing": "3 m", "f_c": "38 MPa", "grade": "500R", "cover": "30 mm",
+        "superimposed": "5.1 kPa", "use": "storage area", "live_load": "12 kPa",
+        "slab_bars": "2 x 15M at 250 mm", "fire_rating": "1 h",
+    },
+    "bars that end just past the next support": {
+        "spans": ["10 m", "3.5 m", "7 m"], "h": "830 mm", "b_w": "300 mm", "h_f": "180 mm",
+        "supports": ["column 700 mm", "wall 500 mm", "wall 600 mm", "wall 400 mm"],
+        "spacing": "4 m", "f_c": "31 MPa", "grade": "400R", "superimposed": "3.7 kPa",
+        "use": "storage area", "live_load": "13.5 kPa", "slab_bars": "2 x 20M at 200 mm",
+        "cover": "30 mm", "fire_rating": "1 h",
+    },
 }  # fmt: skip
 
 

@@ -46,8 +46,11 @@ DESIGN_STATIONS = 101
 MARGIN = 0.998
 """Ratio kept at design, so that stations between those looked at are covered too."""
 Distance = TypeVar("Distance", float, np.ndarray)
-Zone = Literal["compression", "low shear", "double area", ""]
-"""By which rule of 12.10.5 bars may end at a place; "" for none."""
+Zone = Literal["compression", "support", "low shear", "double area", ""]
+"""By which rule of 12.10.5 bars may end at a place; "" for none.
+
+Between the faces of a support no section in shear stands, whose strength an end could lessen.
+"""
 
 
 @dataclass(frozen=True, eq=False, slots=True)
@@ -329,11 +332,16 @@ def zones_at(
     M, V = designed.forces.along(span, x)
     M_face = M if face == "bottom" else -M
     M_f, V_f = M_face.max(axis=0), shear_in_tension(M_face, V).max(axis=0)
-    made: list[Zone] = []
     met = stretches_at(designed, np.array([along(designed, span, near, t) for t in places]))
-    for stretch, moment, shear in zip(met, M_f.tolist(), V_f.tolist(), strict=True):
-        made.append(_zone(designed, face, span, (moment, shear, stretch.V_r), continuing))
-    return made
+    made: list[Zone] = [
+        _zone(designed, face, span, (moment, shear, stretch.V_r), continuing)
+        for stretch, moment, shear in zip(met, M_f.tolist(), V_f.tolist(), strict=True)
+    ]
+    half, far = half_of(designed, span, near), far_face(designed, span, near)
+    return [
+        "support" if zone != "compression" and not half < t < far else zone
+        for t, zone in zip(places, made, strict=True)
+    ]
 
 
 def shear_in_tension(M_face: Floats, V: Floats) -> Floats:

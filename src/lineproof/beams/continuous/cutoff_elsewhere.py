@@ -7,9 +7,19 @@ load case pulls the top at their end, 12.10.5 asks of it what it asks of any oth
 
 from __future__ import annotations
 
-from dataclasses import replace
+from dataclasses import dataclass, replace
 
-from lineproof.beams.continuous.cutoff import along, distance, far_face, half_of, zone_at
+from lineproof.beams.continuous.cutoff import (
+    Frame,
+    Zone,
+    along,
+    distance,
+    far_face,
+    half_of,
+    no_further_need,
+    support_of,
+    zone_at,
+)
 from lineproof.beams.continuous.cutoff_ends import (
     Ending,
     Runs,
@@ -25,6 +35,45 @@ from lineproof.beams.continuous.forces import End, other
 from lineproof.beams.continuous.laps_handed_over import handed_over
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import level_pairs
+
+
+def assumed_restraint(frame: Frame, side: SideOf) -> bool:
+    """Tell whether the top of a face is in tension by an assumed restraint alone."""
+    if support_of(side.span, side.near) not in frame.designed.restrained:
+        return False
+    point = no_further_need(frame, "top", side.span, side.near, 0.0)
+    return point is not None and point.t <= half_of(frame.designed, side.span, side.near)
+
+
+@dataclass(frozen=True, slots=True)
+class JudgedEnd:
+    """Bars that end within a span, those that stand there besides, the rule that lets them."""
+
+    ending: Ending
+    continuing: Runs
+    zone: Zone
+
+
+def judged_cuts(designed: Designed, side: SideOf) -> list[JudgedEnd]:
+    """Return by which rule of 12.10.5 the cuts of a side may end."""
+    cuts = [(ending, side.continuing(index)) for index, ending in enumerate(side.cuts)]
+    return [_judged(designed, side, ending, continuing) for ending, continuing in cuts]
+
+
+def judged_elsewhere(designed: Designed, runs: Runs, side: SideOf, asked: Runs) -> list[JudgedEnd]:
+    """Return by which rule the bars may end that :func:`ends_elsewhere` finds."""
+    return [
+        _judged(designed, side, ending, at_section(runs, "top", x))
+        for ending in ends_elsewhere(designed, runs, side, asked)
+        for x in (along(designed, side.span, side.near, ending.t),)
+    ]
+
+
+def _judged(designed: Designed, side: SideOf, ending: Ending, continuing: Runs) -> JudgedEnd:
+    zone = zone_at(
+        designed, side.face, side.span, side.near, ending.t, continuing, ending.runs
+    )  # fmt: skip
+    return JudgedEnd(ending, continuing, zone)
 
 
 def ends_elsewhere(designed: Designed, runs: Runs, side: SideOf, asked: Runs) -> list[Ending]:
@@ -51,11 +100,9 @@ def _handed(designed: Designed, runs: Runs, run: BarRun, towards: End) -> bool:
 
 def record_ends_elsewhere(site: Site, runs: Runs, asked: Runs) -> None:
     """Record the shear at every such end that lies in the tension zone, a part each."""
-    side, designed = site.side, site.writers.designed
-    for number, ending in enumerate(ends_elsewhere(designed, runs, side, asked), start=1):
-        x = along(designed, side.span, side.near, ending.t)
-        continuing = at_section(runs, "top", x)
-        zone = zone_at(designed, "top", side.span, side.near, ending.t, continuing, ending.runs)
-        if zone != "compression":
-            own = replace(site, title=f"{site.title}, {text_of(ending.runs)}")
-            record_zone(own, f"{site.key}-end-{number}", zone, ending, continuing)
+    judged = judged_elsewhere(site.writers.designed, runs, site.side, asked)
+    for number, end in enumerate(judged, start=1):
+        if end.zone != "compression":
+            own = replace(site, title=f"{site.title}, {text_of(end.ending.runs)}")
+            key = f"{site.key}-end-{number}"
+            record_zone(own, key, end.zone, end.ending, end.continuing)

@@ -135,7 +135,9 @@ def _record_cut(site: Site, index: int) -> None:
             _record_point(site, index, need)
         if zone == "compression":
             _note_compression(site, ending.t)
-    if zone != "compression":
+        elif zone == "support":
+            _note_in_support(site)
+    if zone not in ("compression", "support"):
         record_zone(site, key, zone, ending, continuing)
 
 
@@ -245,6 +247,17 @@ def _note_no_point(site: Site) -> None:
     if site.side.face == "top":
         text = "The bars that go on do not carry the moment alone, not even at midspan."
     site.writers.sheet.note("no-point", text, title="Point of no further need", clause="12.10.3")
+
+
+def _note_in_support(site: Site) -> None:
+    site.writers.sheet.note(
+        "in-support",
+        f"The bars end between the faces of support {support_of(site.side.span, site.side.near)}, "
+        "where no section in shear stands.",
+        title="End of the bars",
+        clause="12.10.5",
+        basis=COMMON_PRACTICE,
+    )
 
 
 def _note_compression(site: Site, t: float) -> None:

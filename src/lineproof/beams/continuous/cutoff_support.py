@@ -13,7 +13,6 @@ from lineproof.beams.continuous.cutoff import (
     distance,
     half_of,
     local,
-    no_further_need,
     support_of,
 )
 from lineproof.beams.continuous.cutoff_ends import Runs, governing_inflection, tip
@@ -179,16 +178,6 @@ def _kept(site: Site) -> Steps:
     record_area(steps, grouped(site.writers, site.side.kept), "A_s")
     record_resistance(steps, site.writers, site.side.face)
     return steps
-
-
-def assumed_restraint(site: Site) -> bool:
-    """Tell whether the top of a face is in tension by an assumed restraint alone."""
-    side, designed = site.side, site.writers.designed
-    support = support_of(side.span, side.near)
-    if support not in designed.restrained:
-        return False
-    point = no_further_need(site.frame, "top", side.span, side.near, 0.0)
-    return point is not None and point.t <= half_of(designed, side.span, side.near)
 
 
 def record_restrained_end(site: Site) -> None:

@@ -11,13 +11,12 @@ from lineproof.beams.continuous.anchorage_record import (
     sizes_of,
 )
 from lineproof.beams.continuous.cutoff import Frame
-from lineproof.beams.continuous.cutoff_elsewhere import record_ends_elsewhere
+from lineproof.beams.continuous.cutoff_elsewhere import assumed_restraint, record_ends_elsewhere
 from lineproof.beams.continuous.cutoff_ends import Runs, at_support, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_inflection import record_past_inflection
 from lineproof.beams.continuous.cutoff_record import Site, record_cuts, side_key
 from lineproof.beams.continuous.cutoff_support import (
     Hooks,
-    assumed_restraint,
     record_end_bottom,
     record_end_top,
     record_hooks,
@@ -100,7 +99,7 @@ def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, su
             layers = top_layers(designed, support)
             section = record_section(writers, layers, side.span, "top", title)
         site = Site(writers, frame, lengths, side, section, key, title)
-        if assumed_restraint(site):
+        if assumed_restraint(frame, side):
             record_restrained_end(site)
             record_ends_elsewhere(site, runs, side.runs)
         else:

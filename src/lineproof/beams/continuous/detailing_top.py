@@ -8,7 +8,7 @@ stirrups, lapped with the corner bars; of the same size they are one with them.
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from lineproof.beams.continuous.anchorage import development_length, value
@@ -44,6 +44,7 @@ from lineproof.beams.continuous.detailing_meeting import (
     to_the_end,
     with_restraint,
 )
+from lineproof.beams.continuous.detailing_tension import lengthen
 from lineproof.beams.continuous.detailing_tips import with_tip_hooks
 from lineproof.beams.continuous.forces import ENDS, End, other
 from lineproof.beams.continuous.laps import lap_length, split
@@ -91,19 +92,27 @@ def lay_top(frame: Frame) -> tuple[BarRun, ...]:
     designed = frame.designed
     supports = range(1, len(designed.outline.supports) + 1)
     reaches = {support: _reaches(frame, support) for support in supports}
-    spans = range(1, len(designed.outline.lengths) + 1)
-    for span in spans:
+    for span in range(1, len(designed.outline.lengths) + 1):
         _fill(frame, span, reaches)
     for support, each in reaches.items():
         groups = groups_of(designed, support)
         continuing = groups[: long_of(groups)]
         for side, found in each.items():
             each[side] = allowed(frame, support, side, continuing, found)
-    rows = {support: _placed_all(designed, support, reaches[support]) for support in supports}
+    runs = _laid(frame, reaches)
+    while lengthen(frame, runs, reaches):
+        runs = _laid(frame, reaches)
+    return runs
+
+
+def _laid(frame: Frame, reaches: Mapping[int, dict[End, Reach]]) -> tuple[BarRun, ...]:
+    """Return the top bars that reach so far, and those that hold the stirrups between them."""
+    designed = frame.designed
+    rows = {support: _placed_all(designed, support, each) for support, each in reaches.items()}
     corners = {support: row[0] for support, row in rows.items() if row}
     others = others_through(designed, rows)
     string = joined(designed, with_holders(designed, corners))
-    middles = [_middle(designed, span) for span in spans]
+    middles = [_middle(designed, span) for span in range(1, len(designed.outline.lengths) + 1)]
     laid = (p for run in (*string, *others) for p in split(designed, run, middles))
     return with_tip_hooks(frame, tuple(laid))
 
