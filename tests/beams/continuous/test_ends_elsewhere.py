@@ -8,9 +8,13 @@ import numpy as np
 import pytest
 
 from lineproof.record import Record
+from lineproof.sheet import Sheet
 
 from .beam_with_gaps import row
-from .flow import record_of, start
+from .cures_told import note, told
+from .flow import CALLS, record_of, run, start, without_cures
+
+ANCHORED = CALLS[: CALLS.index("anchorage") + 1]
 
 SHORT_MIDDLE: dict[str, Any] = {
     "spans": ["9 m", "3 m", "9 m"],
@@ -61,3 +65,32 @@ def test_bars_lapped_with_others_do_not_end_there() -> None:
     """The corner bars of the gallery beam are lapped or run through: no part is about their end."""
     made = record_of()
     assert [key for key in made.entries if "-end-1-shear" in key] == []
+
+
+def test_what_is_told_for_such_an_end_holds() -> None:
+    """Closer stirrups along the span, or the bars of support 3 as far as the face of support 2.
+
+    That face is 225 mm from its axis, the bars end 800 mm from it: 575 mm, in steps of 50 mm 600.
+    """
+    part = "anchorage-top-3-left-end-1-shear"
+
+    def laid(more: float = 0.0, spacing: float = 600.0, *, cures: bool = False) -> Sheet:
+        rows = [*RUNS[:-1], row("top", "4-20M", 9.8 - more / 1000, 14.8, place="overhang")]
+        zones = [{"span": k, "spacing": f"{spacing if k == 2 else 600:g} mm"} for k in (1, 2, 3)]
+        beam = start(**SHORT_MIDDLE, bar_runs=rows, stirrups=zones)
+        return run(beam if cures else without_cures(beam), ANCHORED)
+
+    def low(sheet: Sheet) -> bool:
+        return all(
+            bool(entry) for p in sheet.parts for entry in p.entries.values()
+            if p.key.startswith("anchorage-top-3-left-end") and entry.symbol == "cut-low-shear"
+        )  # fmt: skip
+
+    text = note(laid(cures=True), part)
+    more = told(text, r"the 4-20M in the overhangs that end here made (\d+) mm longer")
+    assert more == 600
+    assert low(laid(more))
+    assert not low(laid(more - 50))
+    s = told(text, r"stirrups at (\d+) mm along span 2")
+    assert low(laid(spacing=s))
+    assert not low(laid(spacing=s + 25))

@@ -16,6 +16,7 @@ from lineproof.beams.continuous import cures_checks
 from lineproof.beams.continuous.cures import Cure
 from lineproof.beams.continuous.cutoff import (
     STEP,
+    Frame,
     along,
     far_face,
     half_of,
@@ -23,7 +24,12 @@ from lineproof.beams.continuous.cutoff import (
     shear_in_tension,
     zone_at,
 )
-from lineproof.beams.continuous.cutoff_ends import SideOf, bottom_side, top_side
+from lineproof.beams.continuous.cutoff_elsewhere import (
+    asked_elsewhere,
+    end_key,
+    judged_elsewhere,
+)
+from lineproof.beams.continuous.cutoff_ends import Ending, Runs, SideOf, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_record import cut_key, shear_key, side_key
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.design import Design
@@ -37,15 +43,16 @@ from lineproof.standards.a23_3 import cutoff as clause
 
 @dataclass(frozen=True, slots=True)
 class Cut:
-    """Bars of one side of a section that end in a tension zone, by their place in its cuts."""
+    """Bars of one side of a section that end in a tension zone, and those that go on there."""
 
     side: SideOf
-    index: int
+    ending: Ending
+    continuing: Runs
 
     @property
     def t(self) -> float:
         """Distance of their end from the near axis [mm]."""
-        return self.side.cuts[self.index].t
+        return self.ending.t
 
 
 def cut_of(design: Design, check: Entry) -> Cut | None:
@@ -53,12 +60,23 @@ def cut_of(design: Design, check: Entry) -> Cut | None:
     if check.source is not clause.CUT_AT_LOW_SHEAR:
         return None
     found = (
-        Cut(side, index)
+        cut
         for key, side in _sides(design)
-        for index in range(len(side.cuts))
-        if shear_key(cut_key(key, index)) == check.part.key
+        for of_cut, cut in _ends(design, key, side)
+        if shear_key(of_cut) == check.part.key
     )
     return next(found, None)
+
+
+def _ends(design: Design, key: str, side: SideOf) -> Iterator[tuple[str, Cut]]:
+    """Give the ends of the bars of a side within its span, with the key of their parts."""
+    for index, ending in enumerate(side.cuts):
+        yield cut_key(key, index), Cut(side, ending, side.continuing(index))
+    if side.face == "top":
+        asked = asked_elsewhere(Frame.of(design.designed), side)
+        judged = judged_elsewhere(design.designed, design.runs, side, asked)
+        for number, end in enumerate(judged, start=1):
+            yield end_key(key, number), Cut(side, end.ending, end.continuing)
 
 
 def _sides(design: Design) -> Iterator[tuple[str, SideOf]]:
@@ -81,7 +99,7 @@ def _longer(design: Design, cut: Cut) -> Cure:
     side, designed = cut.side, design.designed
     inward = side.face == "bottom"
     half, far = (f(designed, side.span, side.near) for f in (half_of, far_face))
-    going, ending = side.continuing(cut.index), side.cuts[cut.index].runs
+    going, ending = cut.continuing, cut.ending.runs
 
     def use(changes: Mapping[str, float]) -> float:
         t = cut.t - changes["longer"] if inward else cut.t + changes["longer"]
@@ -90,7 +108,7 @@ def _longer(design: Design, cut: Cut) -> Cure:
         zone = zone_at(designed, side.face, side.span, side.near, t, going, ending)
         return 0.0 if zone else math.inf
 
-    room = cut.t - half + STEP if inward else far - cut.t
+    room = (cut.t - half if inward else far - cut.t) + STEP
     bars = f"the {text_of(ending)} that end here"
     (cure,) = find.cures(use, {"longer": find.longer(room, bars)})
     return cure

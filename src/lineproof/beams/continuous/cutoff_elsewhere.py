@@ -45,6 +45,14 @@ def assumed_restraint(frame: Frame, side: SideOf) -> bool:
     return point is not None and point.t <= half_of(frame.designed, side.span, side.near)
 
 
+def asked_elsewhere(frame: Frame, side: SideOf) -> Runs:
+    """Return the top bars of a side whose ends within the span are none of its cuts.
+
+    Where the restraint is assumed none of its bars is a cut: there is no point of no further need.
+    """
+    return side.runs if assumed_restraint(frame, side) else side.kept
+
+
 @dataclass(frozen=True, slots=True)
 class JudgedEnd:
     """Bars that end within a span, those that stand there besides, the rule that lets them."""
@@ -98,11 +106,16 @@ def _handed(designed: Designed, runs: Runs, run: BarRun, towards: End) -> bool:
     return any(pair[place] is run for pair in (*pairs, *handed_over(designed, runs)))
 
 
-def record_ends_elsewhere(site: Site, runs: Runs, asked: Runs) -> None:
+def end_key(side: str, number: int) -> str:
+    """Return the key of the part of an end that is no cut, by that of its side and its number."""
+    return f"{side}-end-{number}"
+
+
+def record_ends_elsewhere(site: Site, runs: Runs) -> None:
     """Record the shear at every such end that lies in the tension zone, a part each."""
+    asked = asked_elsewhere(site.frame, site.side)
     judged = judged_elsewhere(site.writers.designed, runs, site.side, asked)
     for number, end in enumerate(judged, start=1):
         if end.zone != "compression":
             own = replace(site, title=f"{site.title}, {text_of(end.ending.runs)}")
-            key = f"{site.key}-end-{number}"
-            record_zone(own, key, end.zone, end.ending, end.continuing)
+            record_zone(own, end_key(site.key, number), end.zone, end.ending, end.continuing)

@@ -101,10 +101,9 @@ def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, su
         site = Site(writers, frame, lengths, side, section, key, title)
         if assumed_restraint(frame, side):
             record_restrained_end(site)
-            record_ends_elsewhere(site, runs, side.runs)
         else:
             record_past_inflection(site)
             record_cuts(site)
-            record_ends_elsewhere(site, runs, side.kept)
+        record_ends_elsewhere(site, runs)
         if designed.exterior(support):
             record_end_top(site)

@@ -10,6 +10,7 @@ import numpy as np
 from lineproof.beams.continuous.cutoff import STEP, Frame, far_face, floor50, thin, zones_at
 from lineproof.beams.continuous.cutoff_elsewhere import (
     JudgedEnd,
+    asked_elsewhere,
     assumed_restraint,
     judged_cuts,
     judged_elsewhere,
@@ -45,10 +46,8 @@ def lengthen(frame: Frame, runs: Runs, reaches: Reaches) -> bool:
 
 def _not_allowed(frame: Frame, runs: Runs, side: SideOf) -> list[JudgedEnd]:
     designed = frame.designed
-    if assumed_restraint(frame, side):
-        judged = judged_elsewhere(designed, runs, side, side.runs)
-    else:
-        judged = [*judged_cuts(designed, side), *judged_elsewhere(designed, runs, side, side.kept)]
+    cuts = [] if assumed_restraint(frame, side) else judged_cuts(designed, side)
+    judged = [*cuts, *judged_elsewhere(designed, runs, side, asked_elsewhere(frame, side))]
     return [end for end in judged if not end.zone]
 
 
