@@ -144,6 +144,15 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "use": "storage area", "live_load": "13.5 kPa", "slab_bars": "2 x 20M at 200 mm",
         "cover": "30 mm", "fire_rating": "1 h",
     },
+    "coated bars near a wide end support": {  # those that go on end too soon for 12.10.4
+        "spans": ["7.6 m", "8.7 m"], "supports": ["girder 500 mm", "wall 350 mm", "girder 300 mm"],
+        "h": "720 mm", "b_w": "330 mm", "h_f": "169 mm", "spacing": "3.4 m", "f_c": "31 MPa",
+        "grade": "400W", "superimposed": "0.8 kPa", "use": "assembly area", "cover": "40 mm",
+        "loads": [{"type": "L", "span": 1, "line": "7 kN/m", "from": "1.9 m", "to": "7.3 m"}],
+        "exposure": "N", "fire_rating": "1 h", "snow": "1.6 kPa", "reduce_live_load": True,
+        "slab_bars": "2 x 10M at 300 mm", "coating": "epoxy", "shear_method": "simplified",
+        "minimum_rule": "10.5.1.2", "project": {"codes": {"pair": "NBC 2020 + A23.3:19"}},
+    },
 }  # fmt: skip
 
 

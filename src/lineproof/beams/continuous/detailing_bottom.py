@@ -312,7 +312,7 @@ def _cut(
     point = no_further_need(
         frame, "bottom", span, near, full_moment(designed, "bottom", span, continuing)
     )
-    if point is None:
+    if point is None or _too_short_beyond(designed, span, near, point.t, continuing):
         return None
     t = floor50(point.t - extension(designed, "bottom", span, near, point.t, run.diameter))
     if earlier is not None:
@@ -339,6 +339,16 @@ def _cut(
     places = [t - steps * STEP for steps in range(first, count)]
     zones = zones_at(designed, "bottom", span, near, places, continuing)
     return next(((tried(first + i), point) for i, zone in enumerate(zones) if zone), None)
+
+
+def _too_short_beyond(
+    designed: Designed, span: int, near: End, t: float, continuing: Sequence[BarRun]
+) -> bool:
+    """Tell whether bars that go on past t end in an end support before 12.10.4 lets others end."""
+    if not designed.exterior(support_of(span, near)):
+        return False
+    length = continuing_length(designed, "bottom", span, near, continuing)
+    return t - support_end(designed, span, near) < length
 
 
 def _joined(designed: Designed, corners: list[BarRun]) -> list[BarRun]:
