@@ -25,7 +25,7 @@ from lineproof.beams.continuous.cutoff import (
     zone_at,
 )
 from lineproof.beams.continuous.cutoff_elsewhere import (
-    asked_elsewhere,
+    Laid,
     end_key,
     judged_elsewhere,
 )
@@ -59,23 +59,22 @@ def cut_of(design: Design, check: Entry) -> Cut | None:
     """Return the cut that a check of low shear stands for."""
     if check.source is not clause.CUT_AT_LOW_SHEAR:
         return None
+    frame, laid = Frame.of(design.designed), Laid.of(design.designed, design.runs)
     found = (
         cut
         for key, side in _sides(design)
-        for of_cut, cut in _ends(design, key, side)
+        for of_cut, cut in _ends(frame, laid, key, side)
         if shear_key(of_cut) == check.part.key
     )
     return next(found, None)
 
 
-def _ends(design: Design, key: str, side: SideOf) -> Iterator[tuple[str, Cut]]:
+def _ends(frame: Frame, laid: Laid, key: str, side: SideOf) -> Iterator[tuple[str, Cut]]:
     """Give the ends of the bars of a side within its span, with the key of their parts."""
     for index, ending in enumerate(side.cuts):
         yield cut_key(key, index), Cut(side, ending, side.continuing(index))
     if side.face == "top":
-        asked = asked_elsewhere(Frame.of(design.designed), side)
-        judged = judged_elsewhere(design.designed, design.runs, side, asked)
-        for number, end in enumerate(judged, start=1):
+        for number, end in enumerate(judged_elsewhere(frame, laid, side), start=1):
             yield end_key(key, number), Cut(side, end.ending, end.continuing)
 
 

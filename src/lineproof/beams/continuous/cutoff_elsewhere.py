@@ -32,9 +32,8 @@ from lineproof.beams.continuous.cutoff_record import Site, record_zone
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.forces import End, other
-from lineproof.beams.continuous.laps_handed_over import handed_over
+from lineproof.beams.continuous.laps_handed_over import lapped_ends
 from lineproof.beams.continuous.layout import BarRun
-from lineproof.beams.continuous.resistance import level_pairs
 
 
 def assumed_restraint(frame: Frame, side: SideOf) -> bool:
@@ -45,12 +44,25 @@ def assumed_restraint(frame: Frame, side: SideOf) -> bool:
     return point is not None and point.t <= half_of(frame.designed, side.span, side.near)
 
 
-def asked_elsewhere(frame: Frame, side: SideOf) -> Runs:
+def _asked_elsewhere(frame: Frame, side: SideOf) -> Runs:
     """Return the top bars of a side whose ends within the span are none of its cuts.
 
     Where the restraint is assumed none of its bars is a cut: there is no point of no further need.
     """
     return side.runs if assumed_restraint(frame, side) else side.kept
+
+
+@dataclass(frozen=True, slots=True)
+class Laid:
+    """All bars as laid, and those of their ends that are lapped with others."""
+
+    runs: Runs
+    lapped: frozenset[tuple[BarRun, End]]
+
+    @classmethod
+    def of(cls, designed: Designed, runs: Runs) -> Laid:
+        """Return bars with what their laps are."""
+        return cls(runs, lapped_ends(designed, runs))
 
 
 @dataclass(frozen=True, slots=True)
@@ -68,11 +80,12 @@ def judged_cuts(designed: Designed, side: SideOf) -> list[JudgedEnd]:
     return [_judged(designed, side, ending, continuing) for ending, continuing in cuts]
 
 
-def judged_elsewhere(designed: Designed, runs: Runs, side: SideOf, asked: Runs) -> list[JudgedEnd]:
-    """Return by which rule the bars may end that :func:`ends_elsewhere` finds."""
+def judged_elsewhere(frame: Frame, laid: Laid, side: SideOf) -> list[JudgedEnd]:
+    """Return where other bars of a side end within the span, lapped with none, by which rule."""
+    designed = frame.designed
     return [
-        _judged(designed, side, ending, at_section(runs, "top", x))
-        for ending in ends_elsewhere(designed, runs, side, asked)
+        _judged(designed, side, ending, at_section(laid.runs, "top", x))
+        for ending in _ends_elsewhere(designed, laid, side, _asked_elsewhere(frame, side))
         for x in (along(designed, side.span, side.near, ending.t),)
     ]
 
@@ -84,26 +97,17 @@ def _judged(designed: Designed, side: SideOf, ending: Ending, continuing: Runs) 
     return JudgedEnd(ending, continuing, zone)
 
 
-def ends_elsewhere(designed: Designed, runs: Runs, side: SideOf, asked: Runs) -> list[Ending]:
-    """Return where some of the bars of a side end within the span and are lapped with none."""
+def _ends_elsewhere(designed: Designed, laid: Laid, side: SideOf, asked: Runs) -> list[Ending]:
     towards = other(side.near)
     half, far = (find(designed, side.span, side.near) for find in (half_of, far_face))
     tips = [
         (distance(designed, side.span, side.near, tip(last, towards)), run)
         for run in asked
-        for last in (whole(designed, runs, run, towards),)
-        if not _handed(designed, runs, last, towards)
+        for last in (whole(designed, laid.runs, run, towards),)
+        if (last, towards) not in laid.lapped
     ]
     ends = sorted({t for t, _ in tips if half < t < far})
     return [Ending(t, tuple(run for s, run in tips if s == t)) for t in ends]
-
-
-def _handed(designed: Designed, runs: Runs, run: BarRun, towards: End) -> bool:
-    """Tell whether a run is lapped with another at its end towards one side."""
-    kept = [each for each in runs if each.place != "side face"]
-    pairs = [(kept[i], kept[j]) for i, j in level_pairs(designed.outline, kept)]
-    place = 0 if towards == "right" else 1
-    return any(pair[place] is run for pair in (*pairs, *handed_over(designed, runs)))
 
 
 def end_key(side: str, number: int) -> str:
@@ -111,11 +115,9 @@ def end_key(side: str, number: int) -> str:
     return f"{side}-end-{number}"
 
 
-def record_ends_elsewhere(site: Site, runs: Runs) -> None:
+def record_ends_elsewhere(site: Site, laid: Laid) -> None:
     """Record the shear at every such end that lies in the tension zone, a part each."""
-    asked = asked_elsewhere(site.frame, site.side)
-    judged = judged_elsewhere(site.writers.designed, runs, site.side, asked)
-    for number, end in enumerate(judged, start=1):
+    for number, end in enumerate(judged_elsewhere(site.frame, laid, site.side), start=1):
         if end.zone != "compression":
             own = replace(site, title=f"{site.title}, {text_of(end.ending.runs)}")
             record_zone(own, end_key(site.key, number), end.zone, end.ending, end.continuing)

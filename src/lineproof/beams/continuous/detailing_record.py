@@ -11,7 +11,11 @@ from lineproof.beams.continuous.anchorage_record import (
     sizes_of,
 )
 from lineproof.beams.continuous.cutoff import Frame
-from lineproof.beams.continuous.cutoff_elsewhere import assumed_restraint, record_ends_elsewhere
+from lineproof.beams.continuous.cutoff_elsewhere import (
+    Laid,
+    assumed_restraint,
+    record_ends_elsewhere,
+)
 from lineproof.beams.continuous.cutoff_ends import Runs, at_support, bottom_side, top_side
 from lineproof.beams.continuous.cutoff_inflection import record_past_inflection
 from lineproof.beams.continuous.cutoff_record import Site, record_cuts, side_key
@@ -53,12 +57,12 @@ def record_lengths_and_ends(writers: Writers, runs: Runs) -> tuple[Writers, Leng
     frame = Frame.of(designed)
     lengths = record_lengths(writers, runs)
     writers = replace(writers, sizes=sizes_of(lengths))
-    hooked = record_hooks(writers, runs)
+    hooked, laid = record_hooks(writers, runs), Laid.of(designed, runs)
     for span in range(1, len(designed.outline.lengths) + 1):
         _record_bottom(writers, frame, lengths, hooked, runs, span)
     for support in range(1, len(designed.outline.supports) + 1):
         if designed.bars.top[support - 1].web:
-            _record_top(writers, frame, lengths, runs, support)
+            _record_top(writers, frame, lengths, laid, support)
     record_laps(writers, lengths, runs)
     record_handed_over(writers, lengths, runs)
     record_crowded(writers, lengths, runs)
@@ -87,12 +91,12 @@ def _record_bottom(
             record_end_bottom(there, hooked)
 
 
-def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, support: int) -> None:
+def _record_top(writers: Writers, frame: Frame, lengths: Lengths, laid: Laid, support: int) -> None:
     designed = writers.designed
     for towards in ENDS:
         if not designed.forces.has_span(support, towards):
             continue
-        side = top_side(designed, runs, support, towards)
+        side = top_side(designed, laid.runs, support, towards)
         key = side_key("top", support, towards)
         title = f"Top bars of support {support}, span {side.span}"
         with writers.sheet.part(key, title):
@@ -104,6 +108,6 @@ def _record_top(writers: Writers, frame: Frame, lengths: Lengths, runs: Runs, su
         else:
             record_past_inflection(site)
             record_cuts(site)
-        record_ends_elsewhere(site, runs)
+        record_ends_elsewhere(site, laid)
         if designed.exterior(support):
             record_end_top(site)

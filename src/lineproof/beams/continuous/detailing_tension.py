@@ -10,7 +10,7 @@ import numpy as np
 from lineproof.beams.continuous.cutoff import STEP, Frame, far_face, floor50, thin, zones_at
 from lineproof.beams.continuous.cutoff_elsewhere import (
     JudgedEnd,
-    asked_elsewhere,
+    Laid,
     assumed_restraint,
     judged_cuts,
     judged_elsewhere,
@@ -30,10 +30,10 @@ def lengthen(frame: Frame, runs: Runs, reaches: Reaches) -> bool:
     ``runs`` are all top bars laid with these reaches. The judgement is that of the record.
     """
     axes = frame.designed.outline.axes
-    longer = False
+    laid, longer = Laid.of(frame.designed, runs), False
     for support, towards in [(support, side) for support, each in reaches.items() for side in each]:
         side = top_side(frame.designed, runs, support, towards)
-        for end in _not_allowed(frame, runs, side):
+        for end in _not_allowed(frame, laid, side):
             added = _next_place(frame, side, end) - end.ending.t
             for other, found in reaches.items():  # bars of the support before may end here
                 if towards in found:
@@ -44,11 +44,9 @@ def lengthen(frame: Frame, runs: Runs, reaches: Reaches) -> bool:
     return longer
 
 
-def _not_allowed(frame: Frame, runs: Runs, side: SideOf) -> list[JudgedEnd]:
-    designed = frame.designed
-    cuts = [] if assumed_restraint(frame, side) else judged_cuts(designed, side)
-    judged = [*cuts, *judged_elsewhere(designed, runs, side, asked_elsewhere(frame, side))]
-    return [end for end in judged if not end.zone]
+def _not_allowed(frame: Frame, laid: Laid, side: SideOf) -> list[JudgedEnd]:
+    cuts = [] if assumed_restraint(frame, side) else judged_cuts(frame.designed, side)
+    return [end for end in (*cuts, *judged_elsewhere(frame, laid, side)) if not end.zone]
 
 
 def _next_place(frame: Frame, side: SideOf, end: JudgedEnd) -> float:

@@ -7,6 +7,7 @@ along the overlap, the bars are cut there (12.10) and hand over nothing.
 
 from __future__ import annotations
 
+from bisect import bisect_left, bisect_right
 from collections.abc import Iterable, Mapping, Sequence
 
 import numpy as np
@@ -15,6 +16,7 @@ from lineproof.beams.continuous.anchorage import bar_of
 from lineproof.beams.continuous.anchorage_record import Lengths, Writers, plain
 from lineproof.beams.continuous.cutoff_sets import text_of
 from lineproof.beams.continuous.detailing_data import Designed
+from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun
 from lineproof.beams.continuous.resistance import (
     MOST_LAP,
@@ -49,11 +51,15 @@ def handed_over(designed: Designed, runs: Iterable[BarRun]) -> list[Pair]:
     kept = [run for run in runs if run.place != "side face"]
     pairs = level_pairs(designed.outline, kept)
     ended, begun = {i for i, _ in pairs}, {j for _, j in pairs}
+    order = sorted((j for j in range(len(kept)) if j not in begun), key=lambda j: kept[j].start)
+    starts = [kept[j].start for j in order]
     beside = [
         (i, j)
         for i, first in enumerate(kept)
-        for j, second in enumerate(kept)
-        if i not in ended and j not in begun and _overlap(designed, first, second)
+        if i not in ended
+        # Of those that start inside it.
+        for j in sorted(order[bisect_right(starts, first.start) : bisect_left(starts, first.end)])
+        if _overlap(designed, first, kept[j])
     ]
     if not beside:
         return []
@@ -70,6 +76,16 @@ def handed_over(designed: Designed, runs: Iterable[BarRun]) -> list[Pair]:
         if _needed(designed, going, kept[i], (start, end)):
             made.append((kept[i], kept[j]))
     return made
+
+
+def lapped_ends(designed: Designed, runs: Iterable[BarRun]) -> frozenset[tuple[BarRun, End]]:
+    """Return the ends of bars that are lapped with others, in line or beside them."""
+    kept = [run for run in runs if run.place != "side face"]
+    pairs = [(kept[i], kept[j]) for i, j in level_pairs(designed.outline, kept)]
+    pairs += handed_over(designed, kept)
+    ended: set[tuple[BarRun, End]] = {(first, "right") for first, _ in pairs}
+    begun: set[tuple[BarRun, End]] = {(second, "left") for _, second in pairs}
+    return frozenset(ended | begun)
 
 
 def _overlap(designed: Designed, first: BarRun, second: BarRun) -> bool:
