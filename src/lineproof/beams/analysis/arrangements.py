@@ -3,8 +3,9 @@
 A23.3, 9.2.3.1: factored dead load on all spans with factored live load on two adjacent spans, on
 alternate spans, and on all spans. Alternate spans give the largest span moments there are. Two
 adjacent spans do not give the largest support moment there is when there are four spans or more:
-that needs every other span beyond the two loaded as well (``beyond=True``). NBC 4.1.5.3 asks for
-any portions, so the wider set is on offer; the difference is shown in the tests.
+that needs every other span beyond the two loaded as well (``beyond=True``). The spans that these
+leave out lift the support between the two the most, and pull its bottom. NBC 4.1.5.3 asks for any
+portions, so the wider set is on offer; the difference is shown in the tests.
 """
 
 from __future__ import annotations
@@ -97,7 +98,8 @@ _EVERYWHERE = Arrangement("", frozenset())
 def standard_arrangements(spans: int, *, beyond: bool = False) -> tuple[Arrangement, ...]:
     """Return the arrangements of 9.2.3.1; a cantilever counts as a span.
 
-    ``beyond`` adds, for every support, the two adjacent spans with every other span beyond them.
+    ``beyond`` adds, for every support, the two adjacent spans with every other span beyond them,
+    and all other spans without these.
 
     >>> [a.name for a in standard_arrangements(3)]  # doctest: +NORMALIZE_WHITESPACE
     ['live load on spans 1, 2, 3', 'live load on spans 1, 3', 'live load on span 2',
@@ -107,7 +109,8 @@ def standard_arrangements(spans: int, *, beyond: bool = False) -> tuple[Arrangem
     sets = [set(numbers), set(numbers[::2]), set(numbers[1::2])]
     sets += [{left, left + 1} for left in numbers[:-1]]
     if beyond:
-        sets += [{*range(left, 0, -2), *range(left + 1, spans + 1, 2)} for left in numbers[:-1]]
+        pairs = [{*range(left, 0, -2), *range(left + 1, spans + 1, 2)} for left in numbers[:-1]]
+        sets += [*pairs, *(set(numbers) - pair for pair in pairs)]
     return tuple(dict.fromkeys(_named(s) for s in sets if s))
 
 

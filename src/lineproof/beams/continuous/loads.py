@@ -204,7 +204,8 @@ def _notes(inputs: ContinuousInputs) -> str:
         + "Wind and earthquake are not carried by this beam. Every combination stands with 1.25 "
         "and with 0.9 times dead load, with each companion load and without it. Live load stands "
         "on all spans, on alternate spans and on two adjacent spans (9.2.3.1), and also on two "
-        "adjacent spans with every other span beyond them and on every span alone (NBC 4.1.5.3). "
+        "adjacent spans with every other span beyond them, on all other spans without these, and "
+        "on every span alone (NBC 4.1.5.3). "
         "No other arrangement is made."
     )
 
