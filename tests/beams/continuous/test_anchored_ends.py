@@ -15,6 +15,7 @@ from lineproof.beams.continuous.anchorage import hook_at
 from lineproof.beams.continuous.anchored_ends import end_hook, least_anchored, top_part
 from lineproof.beams.continuous.detailing_data import Designed, SectionBars
 from lineproof.beams.continuous.layout import BarRun
+from lineproof.errors import UserError
 from lineproof.record import recompute
 
 from . import flow
@@ -289,6 +290,74 @@ def test_ties_around_hooks_are_not_invented_where_bars_and_stirrups_are_given() 
     laid = flow.start(**given)
     assert "12.5.4" not in [each["clause"] for each in flow.run(laid).not_covered]
     assert any(zone.around_hooks for zone in laid.design.detailing.stirrups)
+
+
+@pytest.mark.parametrize(
+    ("supports", "spacing", "l_dh"),
+    [("wall 300 mm", 55, 344.7), ("column 300 mm", 55, 193.0), ("column 300 mm", 65, 241.3)],
+)
+def test_ties_around_hooks_as_built_are_checked(supports: str, spacing: int, l_dh: float) -> None:
+    """Ties 10M around hooks 20M: 3 x 19.5 = 58.5 mm apart at most (12.5.4).
+
+    In a column of 500 mm a beam of 350 mm has 75 mm more at its sides, 116 mm: 0.7 x 344.7 = 241.3
+    mm, and the factor of ties is earned, 0.8 x 241.3 = 193.0 mm, if they stand close enough.
+    """
+    given: dict[str, Any] = {
+        "spans": ["6 m"], "supports": [supports] * 2, "bar_runs": HOOKED,
+        "stirrups": [{"span": 1, "spacing": "250 mm"}],
+        "hook_ties": {1: f"{spacing} mm", 2: f"{spacing} mm"},
+    }  # fmt: skip
+    if supports.startswith("column"):
+        given |= {"columns": {n: ["300 mm x 500 mm x 3.5 m"] for n in (1, 2)}}
+    beam = flow.start(**given)
+    sheet = flow.run(beam)
+    made = sheet.close()
+    hook = "anchorage-end-1-hook-20m"
+    assert made.entries[f"{hook}/l_dh"]["value"] == pytest.approx(l_dh, abs=0.1)
+    assert made.entries[f"{hook}/s_tie"]["value"] == spacing
+    assert made.entries[f"{hook}/hook-ties"]["holds"] is (spacing <= 58.5)
+    ties = [zone for zone in beam.design.detailing.stirrups if zone.around_hooks]
+    assert [(zone.spacing, zone.number) for zone in ties] == [(spacing, 250 // spacing)] * 2
+    assert "12.5.4" not in [each["clause"] for each in sheet.not_covered]
+
+
+def test_ties_around_hooks_of_one_end_leave_the_other_not_covered() -> None:
+    sheet = flow.run(
+        flow.start(
+            spans=["6 m"], supports=["wall 300 mm"] * 2, bar_runs=HOOKED,
+            stirrups=[{"span": 1, "spacing": "250 mm"}], hook_ties={1: "55 mm"},
+        )
+    )  # fmt: skip
+    made = sheet.close()
+    assert "anchorage-end-1-hook-20m/hook-ties" in made.entries
+    assert "anchorage-end-2-hook-20m/no-ties" in made.entries
+    assert "12.5.4" in [each["clause"] for each in sheet.not_covered]
+
+
+@pytest.mark.parametrize(
+    ("changes", "told"),
+    [
+        ({"hook_ties": {2: "75 mm"}}, "support 2 is no end of the beam; hooks stand at 1 and 4"),
+        ({"hook_ties": {"1": "75 mm"}}, "is no number of a support"),
+        ({"hook_ties": "75 mm"}, "write their spacing by the number of the end support"),
+        ({"hook_ties": {1: "75"}}, "has no unit"),
+        ({"hook_ties": {1: "7.5 m"}}, "outside 30 to 600 mm"),
+        ({"hook_ties": {1: "75 mm"}, "stirrups": None}, "where bars and stirrups are both given"),
+        (
+            {"hook_ties": {1: "75 mm"}, "supports": ["free", *["column 450 mm"] * 3]},
+            "support 1 is a free end",
+        ),
+    ],
+)
+def test_wrong_ties_are_told(changes: dict[str, Any], told: str) -> None:
+    given: dict[str, Any] = {
+        "bar_runs": [row | {"end": "24.55 m"} for row in HOOKED],
+        "stirrups": [{"span": k, "spacing": "250 mm"} for k in (1, 2, 3)],
+    }  # fmt: skip
+    with pytest.raises(UserError) as raised:
+        flow.start(**given | changes)
+    assert "hook_ties" in str(raised.value)
+    assert told in str(raised.value)
 
 
 def test_hanger_stirrups_of_a_beam_as_built_are_listed_as_not_covered() -> None:

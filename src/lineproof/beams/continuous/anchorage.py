@@ -242,7 +242,7 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
     """Return the hook of a bar at an end of the beam.
 
     ``outside`` says that the bar stands in an overhang, where the ties of the web earn it nothing.
-    Of a beam as built no ties are known.
+    Of a beam as built only ties that are given are known; those too far apart earn nothing.
     Raises :class:`UserError` for an edition whose hooks cannot be calculated.
     """
     s = designed.strengths
@@ -256,8 +256,10 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
     )  # fmt: skip
     side, face = holds(hooks.SIDE_COVERED, c_side=c_side), holds(hooks.FACE_COVERED, c_top=c_top)
     reduced = side and holds(hooks.TAIL_COVERED, c_tail=c_tail) and holds(laps.LAPPABLE, d_b=d_b)
-    tied = not (designed.as_built or (side and face))
-    ties = ties_row(side=side, face=face, tied=tied and not outside)
+    tied = ties_stand(designed, support) and not (side and face)
+    s_tie = designed.hook_ties.get(support) or _tie_spacing_apart(designed, d_b)
+    close = holds(hooks.TIED, s_tie=s_tie, d_b=d_b)
+    ties = ties_row(side=side, face=face, tied=tied and close and not outside)
     l_hb = value(basic, d_b=d_b, f_c=s.f_c, f_y=s.f_y)
     l_dh = value(
         hooks.L_DH,
@@ -266,8 +268,12 @@ def hook_at(designed: Designed, support: int, size: str, *, outside: bool = Fals
         k_hd=hooks.DENSITY_FACTORS.number(s.density, "k_hd"),
         k_he=hooks.COATING_FACTORS.number(s.coating, "k_he"), l_hb=l_hb, d_b=d_b,
     )  # fmt: skip
-    s_tie = _tie_spacing_apart(designed, d_b)
     return HookLength(size, c_side, c_tail, c_top, tied, s_tie, l_hb, l_dh)
+
+
+def ties_stand(designed: Designed, support: int) -> bool:
+    """Tell whether ties stand around hooks of small cover at an end: laid, or given as built."""
+    return not designed.as_built or support in designed.hook_ties
 
 
 def _tie_spacing_apart(designed: Designed, d_b: float) -> float:

@@ -15,10 +15,12 @@ from lineproof.beams.continuous.anchorage import (
     UNCOVERED_ROW,
     Bar,
     bar_of,
+    holds,
     room_beside,
     sides_of,
     tie_spacing,
     ties_row,
+    ties_stand,
 )
 from lineproof.beams.continuous.detailing_data import Designed, ShearStretch
 from lineproof.beams.continuous.forces import Demand, End
@@ -42,8 +44,8 @@ _BESIDE = (
 TIED_IN_WEB = "Ties around the hooks within the web, of small cover where the beam ends"
 _NO_TIES = (
     "Where the cover is so small, ties must stand around the hooks. Bars and stirrups are those "
-    "given, which hold no such ties: none are laid or counted. Whether they stand there is NOT "
-    "checked here; the calculation lists it as not covered."
+    "given, and no such ties are given (hook_ties): none are laid or counted. Whether they stand "
+    "there is NOT checked here; the calculation lists it as not covered."
 )
 TIES_IN_JOINT = (
     "The hooks of the bars in the overhangs stand outside the ties of the beam and are NOT tied "
@@ -287,11 +289,12 @@ def record_hook(
     side, tail = steps.decide(hooks.SIDE_COVERED), steps.decide(hooks.TAIL_COVERED)
     face = steps.decide(hooks.FACE_COVERED)
     asked = not (side and face)
-    tied = asked and not designed.as_built
+    tied = asked and ties_stand(designed, support)
+    close = holds(hooks.TIED, s_tie=ties, d_b=steps.entry("d_b").value)
     reduced = bool(side and tail) and steps.holds(laps.LAPPABLE)
     if tied and outside:
         sheet.note("outside", _OUTSIDE, title="Ties around the hooks", clause="12.5.3")
-    row = ties_row(side=bool(side), face=bool(face), tied=tied and not outside)
+    row = ties_row(side=bool(side), face=bool(face), tied=tied and close and not outside)
     _record_hook_factors(steps, designed, reduced=reduced, ties=row)
     steps.lines(basic, hooks.L_DH)
     if tied:
@@ -307,7 +310,8 @@ def _record_ties(steps: Steps, designed: Designed, ties: float, *, outside: bool
         text = TIES_IN_JOINT.format(tie_spacing(steps.entry("d_b").value))
         steps.sheet.note("ties-in-joint", text, title="Hooks in the overhangs", clause="12.5.4")
         return
-    steps.bind(s_tie=steps.sheet.given("s_tie", plain(ties, "mm"), source="as laid"))
+    source = "as built" if designed.as_built else "as laid"
+    steps.bind(s_tie=steps.sheet.given("s_tie", plain(ties, "mm"), source=source))
     steps.check(hooks.TIED, title=TIED_IN_WEB if sides_of(designed.outline) else "")
     steps.check(hooks.TIES_CLEAR, a_max=steps.sheet.find("a_max"))
 

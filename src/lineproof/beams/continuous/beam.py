@@ -261,6 +261,7 @@ def continuous_beam(
     closed_stirrups: bool = False,
     stirrups: Sequence[Mapping[str, Any]] | None = None,
     bar_runs: Sequence[Mapping[str, Any]] | None = None,
+    hook_ties: Mapping[int, QuantityInput] | None = None,
     torques: Mapping[str, QuantityInput] | None = None,
     torsion: str = "compatibility",
     slab_bars: str | None = None,
@@ -275,8 +276,9 @@ def continuous_beam(
     ``'free'`` at the end of a cantilever. ``columns`` holds, by number of the support, the columns
     below and above that hold the beam elastically. ``loads`` are those beside the floor:
     ``{'type': 'L', 'span': 2, 'point': '40 kN', 'at': '3.1 m', 'what': 'beam B12'}``. Bars left
-    out are chosen. ``forces_csv`` names a file of an office's frame analysis whose moments, shears
-    and torsions stand in the place of our own analysis, ``reactions_csv`` its reactions.
+    out are chosen. ``hook_ties`` gives the spacing of the ties around hooks of a beam as built, by
+    the number of its end supports. ``forces_csv`` names a file of an office's frame analysis whose
+    moments, shears and torsions stand in the place of our own, ``reactions_csv`` its reactions.
 
     Raises :class:`UserError` with every fault at once, before anything is recorded.
     """
@@ -323,7 +325,12 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
 
 def _ties_unknown(inputs: ContinuousInputs) -> bool:
     """Tell whether hooks of a beam as built have so small a cover that they ask for ties."""
-    hooked = any(run.hook_start or run.hook_end for run in inputs.bar_runs or ())
+    hooked = any(
+        run.bent_at(support)
+        for support in (1, len(inputs.supports))
+        for run in inputs.bar_runs or ()
+        if support not in inputs.hook_ties
+    )
     d_bs = BARS.number(inputs.stirrup, "d_b")
     c_top = numbers.value(hooks.FACE_COVER, {"c_c": inputs.cover.value, "d_bs": d_bs})
     return inputs.as_built and hooked and not numbers.holds(hooks.FACE_COVERED, {"c_top": c_top})

@@ -189,6 +189,7 @@ def _designed(
         basis, model.forces, none, pair, breadths=breadths,
         restrained=faces.restrained_supports(model),
         tail_cover=tail_cover(basis.outline, runs or ()), as_built=model.inputs.as_built,
+        hook_ties=model.inputs.hook_ties,
     )  # fmt: skip
     bottom = flexure_choice.choose_bottom(
         model, pair, bottom_given, asked.bottom,

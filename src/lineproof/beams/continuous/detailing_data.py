@@ -147,7 +147,8 @@ class Designed:
     support number replace those found here. ``torsion`` is known, by span, where torsion counts:
     there the bottom bars run through. ``restrained`` holds the numbers of the end supports that are
     analysed as simple and designed for an assumed restraint. ``as_built`` tells that bars and
-    stirrups are both given: nothing is laid beside them, no ties around hooks either.
+    stirrups are both given: nothing is laid beside them; ``hook_ties`` gives then the spacing [mm]
+    of the ties that stand around hooks, by the number of the end support.
     """
 
     basis: Basis
@@ -163,6 +164,7 @@ class Designed:
     torsion: Mapping[int, TorsionForces] = field(default_factory=dict)
     restrained: frozenset[int] = frozenset()
     as_built: bool = False
+    hook_ties: Mapping[int, float] = field(default_factory=dict)
 
     @property
     def outline(self) -> BeamOutline:

@@ -38,6 +38,7 @@ from lineproof.beams.continuous.typed_beam import (
     spans_counted,
 )
 from lineproof.beams.continuous.typed_runs import read_runs
+from lineproof.beams.continuous.typed_ties import check_hook_ties, read_hook_ties
 from lineproof.beams.continuous.typed_torques import KINDS_OF_TORSION, read_torques
 from lineproof.beams.inputs import (
     MINIMUM_RULES,
@@ -124,6 +125,7 @@ class ContinuousInputs:
     closed_stirrups: bool
     stirrups: Mapping[int, SpanStirrups] | None
     bar_runs: tuple[BarRun, ...] | None
+    hook_ties: Mapping[int, float]
     torques: Mapping[str, Typed]
     torsion: str
     slab_bars: SlabBars | None
@@ -244,6 +246,7 @@ def _read_laid(
     return {
         "bar_runs": some("bar_runs", read_runs, outline, pair),
         "stirrups": some("stirrups", read_stirrups, clear, stirrup),
+        "hook_ties": some("hook_ties", read_hook_ties) or {},
     }
 
 
@@ -254,6 +257,7 @@ def _check_together(fields: dict[str, Any], given: Mapping[str, Any], faults: Fa
     check_slab(fields, given, faults)
     check_snow(fields, faults)
     check_bars_given(fields, faults)
+    check_hook_ties(fields, given, faults)
     check_method(fields, faults)
     if fields["spans"]:
         check_torques(fields, faults)
