@@ -11,6 +11,7 @@ from __future__ import annotations
 
 import json
 from collections.abc import Mapping
+from dataclasses import replace
 from typing import Any
 
 import pytest
@@ -56,6 +57,29 @@ def test_skin_bars_stand_in_schedule_and_drawings(deep: Record) -> None:
     drawn = json.dumps(deep.entries["summary/elevation-1"])
     assert "F01" in drawn
     assert "F02" in drawn
+
+
+def test_the_slab_takes_a_part_of_the_strip_at_a_support() -> None:
+    """By hand, with a slab of 180 mm: below it the side is 900 - 41.3 - 180 = 678.7 mm high.
+
+    Top bars as before, 3 bars in the strip. Above half the depth 450 - 180 = 270 mm of side are
+    left: with six bars at each face they stand 678.7/7 = 97.0 mm apart, at 277, 374 and 471 mm from
+    the top, and the third is past half the depth. So 270/3 = 90 mm, 7.5 gaps: seven at each face,
+    84.8 mm apart, the third at 434 mm. From the bottom three of the six would have done.
+    """
+    beam = start(**DEEP, h_f="180 mm")
+    run(beam)
+    skin = [bars for bars in beam.design.detailing.bars if bars.place == "side face"]
+    assert {bars.number for bars in skin} == {14}
+    made = record_of(**DEEP, h_f="180 mm")
+    assert made.entries["hog-2-right/n_k"]["value"] == 3
+    assert made.entries["hog-2-right/skin-area"]["holds"]
+    laid = beam.design.detailing.bars
+    six = [replace(bars, number=12) if bars in skin else bars for bars in laid]
+    fewer = record_of(**DEEP, h_f="180 mm", bar_runs=[typed_row(each) for each in six])
+    assert fewer.entries["hog-2-right/n_k"]["value"] == 2
+    assert "hog-2-right/skin-area" in fewer.failed
+    assert fewer.entries["sag-2/n_k"]["value"] == 3
 
 
 def test_a_cantilever_alone_has_skin_bars() -> None:

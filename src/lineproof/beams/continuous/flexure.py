@@ -120,7 +120,7 @@ def record_sag(design: Design, span: int) -> None:
             cracks_inside(steps, inputs.exposure, layers, stress=stress, coated=inputs.coated)
         if steps.decide(NEEDS_SKIN):
             side = design.side_bars(span, sag_at(design.designed, span))
-            record_skin(steps, inputs.exposure, side)
+            record_skin(steps, inputs.exposure, side, "bottom")
 
 
 def _record_strength(
@@ -314,7 +314,7 @@ def _record_face(
     )  # fmt: skip
     if steps.holds(NEEDS_SKIN):
         x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
-        record_skin(steps, inputs.exposure, design.side_bars(face.span, x))
+        record_skin(steps, inputs.exposure, design.side_bars(face.span, x), "top")
     _take(steps, _SHARED)
     made = dict(sheet.part_entries) | dict(counts)
     shared = {name: made[name] for name in _SHARED if name in made}

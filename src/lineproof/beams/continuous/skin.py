@@ -1,7 +1,8 @@
 """Skin reinforcement of deep beams (10.6.2) along the beam: the bars of the side faces.
 
-A strip reaches over half the depth, in the span from below, at a support from above. So the bars
-stand evenly over the whole side, as close as the strip that asks for most lets them.
+A strip reaches to half the depth, in the span from below, at a support from above. So the bars
+stand evenly over the whole side, as close as the strip that asks for most lets them. The side
+begins below the slab: of a strip at a support the slab takes a part, in which no skin bars stand.
 """
 
 from __future__ import annotations
@@ -12,7 +13,7 @@ from dataclasses import dataclass
 
 from lineproof.beams.continuous.anchorage import Bar, develop
 from lineproof.beams.continuous.detailing_data import STOCK, Designed
-from lineproof.beams.continuous.layout import BarRun
+from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.numbers import Numbers, holds, put
 from lineproof.beams.continuous.resistance import section_depth
 from lineproof.beams.cracks import (
@@ -33,22 +34,45 @@ STEP = 50.0
 
 @dataclass(frozen=True, slots=True)
 class SideBars:
-    """Bars of one size at each side face, evenly over the ``height`` between the outer layers."""
+    """Bars of one size at each side face, evenly over the ``side`` between the outer layers."""
 
     size: str
     each: int
-    height: float
+    side: Side
 
-    def within(self, strip: float) -> int:
-        """Return how many stand within any strip of that height [mm] at each face."""
-        return math.floor(strip * (self.each + 1) / self.height * (1 + 1e-12))
+    def within(self, strip: float, face: Face) -> int:
+        """Return how many at each side face stand in a strip of that height [mm] at a face."""
+        counted = self.side.counted(strip, face) * (self.each + 1) / self.side.height
+        return math.floor(counted * (1 + 1e-12))
 
 
-def side_height(designed: Designed, span: int) -> float:
-    """Return the height of a side between the outer layers, below the slab [mm]."""
+@dataclass(frozen=True, slots=True)
+class Side:
+    """The side of a span ``h`` deep: it begins ``below`` from the bottom, ``above`` from the top.
+
+    mm. From below it begins within the stirrup, from above there or below the slab.
+    """
+
+    h: float
+    below: float
+    above: float
+
+    @property
+    def height(self) -> float:
+        """Height over which the bars stand evenly."""
+        return self.h - self.below - self.above
+
+    def counted(self, strip: float, face: Face) -> float:
+        """Return the height of a strip at a face in which bars can stand: to half the depth."""
+        begins = self.below if face == "bottom" else self.above
+        return max(min(strip, self.h / 2 - begins), 0.0)
+
+
+def side_of(designed: Designed, span: int) -> Side:
+    """Return the side of a span between the outer layers, below the slab."""
     outline = designed.outline
     inset = outline.cover + BARS.number(designed.basis.stirrups.size, "d_b")
-    return outline.depths[span - 1] - inset - max(inset, outline.h_f)
+    return Side(outline.depths[span - 1], inset, max(inset, outline.h_f))
 
 
 def side_bars(designed: Designed, runs: Sequence[BarRun], span: int, x: float) -> SideBars:
@@ -63,7 +87,7 @@ def side_bars(designed: Designed, runs: Sequence[BarRun], span: int, x: float) -
         if not any(_lapped(run, other) for other in kept):
             kept.append(run)
     each = sum(run.number for run in kept) // SIDES
-    return SideBars(thin.size if thin else SKIN_BAR, each, side_height(designed, span))
+    return SideBars(thin.size if thin else SKIN_BAR, each, side_of(designed, span))
 
 
 def _lapped(run: BarRun, other: BarRun) -> bool:
@@ -72,10 +96,13 @@ def _lapped(run: BarRun, other: BarRun) -> bool:
     return first.start < second.start and first.end < second.end
 
 
-def record_skin(steps: Steps, exposure: str, side: SideBars) -> None:
-    """Record inside the open part the skin reinforcement of a section with the bars there."""
+def record_skin(steps: Steps, exposure: str, side: SideBars, face: Face) -> None:
+    """Record inside the open part the skin reinforcement of a section with the bars there.
+
+    ``face`` is the one in tension.
+    """
     A_bk = record_skin_area(steps, exposure, side.size)
-    within = side.within(float(steps.entry("h_sk").value))
+    within = side.within(float(steps.entry("h_sk").value), face)
     source = "none stand at the side faces"
     if side.each:
         source = f"{side.each} at each face, evenly over the side; those within the strip"
@@ -98,8 +125,8 @@ def _each_face(designed: Designed, exposure: str, span: int) -> int:
     if not holds(clause.NEEDS_SKIN, {"h": h}):
         return 0
     A_b = BARS.number(SKIN_BAR, "A_b")
-    spacings = []
-    for d in _depths(designed, span):
+    spacings, side = [], side_of(designed, span)
+    for face, d in _depths(designed, span):
         at: Numbers = {
             "h": h, "d": d, "b_w": designed.outline.b_w, "c_c": designed.outline.cover,
             "d_bs": BARS.number(designed.basis.stirrups.size, "d_b"),
@@ -108,19 +135,20 @@ def _each_face(designed: Designed, exposure: str, span: int) -> int:
         }  # fmt: skip
         put(at, clause.SKIN_DEPTH, clause.SKIN_HEIGHT, clause.SKIN_WIDTH, clause.SKIN_STRIPS)
         put(at, clause.SKIN_AREA)
-        if at["h_sk"] > 0:
-            spacings.append(at["h_sk"] / bars_each_face(at["A_sk"], at["h_sk"], A_b))
-    gaps = side_height(designed, span) / min(spacings, default=clause.SKIN_SPACING_MOST)
+        height = side.counted(at["h_sk"], face)
+        if height > 0:
+            spacings.append(height / bars_each_face(at["A_sk"], at["h_sk"], A_b))
+    gaps = side.height / min(spacings, default=clause.SKIN_SPACING_MOST)
     return max(math.ceil(gaps * (1 - 1e-12)) - 1, 1)
 
 
-def _depths(designed: Designed, span: int) -> Iterator[float]:
-    """Give the depths of the sections of a span whose tension face has a strip."""
+def _depths(designed: Designed, span: int) -> Iterator[tuple[Face, float]]:
+    """Give the sections of a span whose tension face has a strip: that face, and their depth."""
     if not designed.cantilever(span):
-        yield section_depth(designed, "bottom", span)
+        yield "bottom", section_depth(designed, "bottom", span)
     for support in (span, span + 1):
         if designed.held(support) and designed.bars.top[support - 1].web:
-            yield section_depth(designed, "top", span, support)
+            yield "top", section_depth(designed, "top", span, support)
 
 
 def _along(designed: Designed, span: int, number: int) -> Iterator[BarRun]:
