@@ -26,6 +26,7 @@ from lineproof.beams.continuous.design_torsion import (
 )
 from lineproof.beams.continuous.detailing import lay_bars
 from lineproof.beams.continuous.detailing_data import (
+    END_COVER,
     Basis,
     Designed,
     SectionBars,
@@ -42,7 +43,7 @@ from lineproof.beams.continuous.detailing_given import (
     tail_cover,
     top_bars_at,
 )
-from lineproof.beams.continuous.detailing_ties import beside_ties, hook_ties
+from lineproof.beams.continuous.detailing_ties import beside_ties, hook_ties, off_free_ends
 from lineproof.beams.continuous.developed import Developed, developed_at
 from lineproof.beams.continuous.faces import Face
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
@@ -187,6 +188,7 @@ def _designed(
     none = SectionBars((), (), asked.holders)
     bare = Designed(
         basis, model.forces, none, pair, breadths=breadths,
+        end_cover=max(END_COVER, basis.outline.cover),
         restrained=faces.restrained_supports(model),
         tail_cover=tail_cover(basis.outline, runs or ()), as_built=model.inputs.as_built,
         hook_ties=model.inputs.hook_ties,
@@ -211,7 +213,8 @@ def _designed(
     if before is not None:
         designed = replace(before.designed, bars=bars, torsion={})
     designed, laid, choice = _laid(model, designed, runs)
-    choice = replace(choice, zones=beside_ties(designed, laid, choice.zones))
+    zones = beside_ties(designed, laid, off_free_ends(designed, choice.zones))
+    choice = replace(choice, zones=zones)
     return Design(model, pair, bottom, top, designed, laid, choice)
 
 

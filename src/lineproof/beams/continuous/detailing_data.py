@@ -26,7 +26,7 @@ THETA = 35.0
 STOCK = 12_000.0
 """Longest bar [mm] where nothing else is said."""
 END_COVER = 50.0
-"""Concrete outside of the bars at the ends of the beam [mm] where nothing else is said."""
+"""Concrete outside of the bars at the ends of the beam [mm], or the cover where that is more."""
 
 
 @dataclass(frozen=True, slots=True)

@@ -9,9 +9,14 @@ from math import ceil
 from lineproof.beams.continuous.anchorage import hook_at, ties_at
 from lineproof.beams.continuous.detailing_data import Designed
 from lineproof.beams.continuous.layout import BarRun, StirrupZone, places_of
+from lineproof.standards.a23_3.bars import BARS
 
 BESIDE_TIES = 100.0
 """Distance of the first stirrup from ties around hooks at a free end [mm] (common practice)."""
+FROM_SUPPORT = 25.0
+"""Least distance of a stirrup from the face of the support when a span's move towards it [mm]."""
+WHOLE = 5.0
+"""Half a stirrup is rounded up to this [mm] beyond the ends of the bars."""
 _NEAR = 1e-6
 
 
@@ -31,6 +36,52 @@ def beside_ties(
         kept = (_from(zone, last, inward) for zone in made)
         made = tuple(zone for zone in kept if zone is not None)
     return made
+
+
+def off_free_ends(designed: Designed, zones: Sequence[StirrupZone]) -> tuple[StirrupZone, ...]:
+    """Return the stirrups of a beam moved inward where one stands past its bars at a free end.
+
+    Spaces at the faces of a span are evened without looking at what is there: all stirrups of the
+    span move towards the support as far as there is room, then the outermost one alone.
+    """
+    made = tuple(zones)
+    for support in (1, len(designed.outline.supports)):
+        if not designed.held(support):
+            span = 1 if support == 1 else len(designed.outline.lengths)
+            own = [zone for zone in made if zone.span == span]
+            moved = _off_end(designed, support, own) if own else own
+            rest = tuple(zone for zone in made if zone.span != span)
+            made = (*moved, *rest) if support == 1 else (*rest, *moved)
+    return made
+
+
+def _off_end(designed: Designed, support: int, own: Sequence[StirrupZone]) -> Sequence[StirrupZone]:
+    """Return the stirrups of the span at a free end, none of them past the ends of its bars."""
+    end, inward = _first_tie(designed, support)
+    least = ceil(BARS.number(designed.basis.stirrups.size, "d_b") / 2 / WHOLE) * WHOLE
+    face = designed.outline.faces(own[0].span)[0 if inward < 0 else 1]
+    places = [x for zone in own for x in places_of(zone)]
+    outer, inner = min(places, key=lambda x: inward * x), max(places, key=lambda x: inward * x)
+    past = least - inward * (outer - end)
+    if past <= _NEAR:
+        return own
+    together = min(past, max(inward * (face - inner) - FROM_SUPPORT, 0.0))
+    by = inward * together
+    own = [replace(zone, start=zone.start + by, end=zone.end + by) for zone in own]
+    return own if past - together <= _NEAR else _outer_moved(own, inward * (past - together))
+
+
+def _outer_moved(own: Sequence[StirrupZone], by: float) -> list[StirrupZone]:
+    """Return the stirrups of a span with the outermost moved alone: the first where it moves on."""
+    ordered = sorted(own, key=lambda zone: zone.start, reverse=by < 0)
+    zone, *others = ordered
+    outer = zone.start if by > 0 else zone.end
+    alone = replace(zone, start=outer + by, end=outer + by, number=1)
+    if zone.number > 1:
+        step = (zone.end - zone.start) / (zone.number - 1)
+        start, end = (zone.start + step, zone.end) if by > 0 else (zone.start, zone.end - step)
+        others = [replace(zone, start=start, end=end, number=zone.number - 1), *others]
+    return sorted([alone, *others], key=lambda zone: zone.start)
 
 
 def hook_ties(
