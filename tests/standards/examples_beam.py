@@ -43,6 +43,7 @@ EXAMPLES_BEAM: dict[str, tuple[Given, Given]] = {
     "shear.DEPTH_WITHOUT_STIRRUPS": ({"h": 750}, {"h": 751}),
     "shear.CLEAR_SPACE": ({"s": 100, "d_bs": 11.3}, {"s": 75, "d_bs": 11.3}),
     "shear_bars.HOOKS_SUFFICE": ({"d_bs": 16}, {"d_bs": 19.5}),
+    "shear_bars.CORNERS_HELD": ({"n_cb": 2}, {"n_cb": 1}),
     # 0.85*1633*400 = 555.2 kN; 0.85*656*400 = 223.0 kN
     "shear_bars.TENSION_SIDE_HOLDS": (
         {**S, "F_lt": 555.2, "A_sd": 1633},

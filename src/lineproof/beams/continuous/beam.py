@@ -43,6 +43,7 @@ from lineproof.beams.continuous.reactions import ties_not_covered
 from lineproof.beams.continuous.resistance_cover import COVERAGE, Gap, covered
 from lineproof.beams.continuous.shear_chapter import STIRRUPS, record_shear
 from lineproof.beams.continuous.statics import record_analysis
+from lineproof.beams.continuous.stirrup_corners import CORNERS
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
 from lineproof.beams.floor_beam import keep_typed, prepare
 from lineproof.errors import inputs_named
@@ -315,6 +316,9 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
         if inputs.as_built:
             what = "Hanger stirrups that stand in the girders: only those needed are calculated"
             rows.append({"check": what, "clause": "11.2.12"})
+    if inputs.stirrup_legs > CORNERS:
+        what = "A bar in each bend of the inner stirrups: only the bars of the schedule stand there"
+        rows.append({"check": what, "clause": "12.13.3"})
     if _ties_unknown(inputs):
         what = "Ties around the hooks where the beam ends: none are given with bars and stirrups"
         rows.append({"check": what, "clause": "12.5.4"})

@@ -85,7 +85,7 @@ def record_shear(design: Design) -> None:
     sheet = model.sheet
     with sheet.part(STIRRUPS, "Stirrups"):
         ties = [zone for zone in design.detailing.stirrups if zone.around_hooks]
-        alike = record_stirrups(Steps(sheet, {}), choice, design.outline, ties)
+        alike = record_stirrups(Steps(sheet, {}), choice, design.outline, ties, design.runs)
         if design.raised and not design.designed.torsion:
             tips = any(not design.designed.held(n) for n in (1, model.spans + 1))
             text = f"{MORE_BARS.format('; '.join(design.raised))} {AT_GIRDER}"

@@ -6,7 +6,8 @@ import math
 from collections.abc import Sequence
 from itertools import pairwise
 
-from lineproof.beams.continuous.layout import BeamOutline, StirrupZone, places_of
+from lineproof.beams.continuous.layout import BarRun, BeamOutline, StirrupZone, places_of
+from lineproof.beams.continuous.stirrup_corners import fewest_in_corners, record_corners
 from lineproof.beams.continuous.stirrups_choice import Choice
 from lineproof.beams.steps import Steps
 from lineproof.formula import COMMON_PRACTICE, FROM_MEMORY
@@ -43,11 +44,16 @@ _HOOKS_CLOSED = (
 
 
 def record_stirrups(
-    steps: Steps, choice: Choice, outline: BeamOutline, ties: Sequence[StirrupZone] = ()
+    steps: Steps,
+    choice: Choice,
+    outline: BeamOutline,
+    ties: Sequence[StirrupZone] = (),
+    runs: Sequence[BarRun] = (),
 ) -> dict[str, Entry]:
     """Record inside the open part the stirrups of the beam; return A_v, A_t, d_bs for sections.
 
-    ``ties`` are those around hooks in the end supports. Needs b_w, f_c, f_y on the sheet.
+    ``ties`` are those around hooks in the end supports, ``runs`` the bars along the beam. Needs
+    b_w, f_c, f_y on the sheet.
     """
     sheet, basis = steps.sheet, choice.basis
     made = {
@@ -57,6 +63,9 @@ def record_stirrups(
     steps.bind(n_v=sheet.given("n_v", str(basis.legs)), **made)
     made["A_v"] = steps.line(shear.STIRRUP_LEGS)
     steps.check(shear_bars.HOOKS_SUFFICE)
+    fewest = fewest_in_corners(outline, runs, choice.zones)
+    if fewest is not None:
+        record_corners(steps, fewest, basis.legs)
     sheet.note(
         "stirrup-anchorage",
         f"{_HOOKS_CLOSED if basis.closed else _HOOKS_OPEN}, and reach as near to both faces as the "

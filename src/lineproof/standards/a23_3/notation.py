@@ -169,6 +169,7 @@ _ROWS = (
     ("x_z", "x", "z", "", "distance of the section from the change of spacing", "mm"),
     ("s_x", "s", "x", "", "spacing that counts beside the change of spacing", "mm"),
     ("n_v", "n", "v", "", "number of legs of a stirrup", ""),
+    ("n_cb", "n", "cb", "", "fewest bars in the outer layer of a face where stirrups stand", ""),
     ("n_h", "n", "h", "", "number of hanger stirrups", ""),
     ("s_z", "s", "z", "", "crack spacing parameter", "mm"),
     ("s_ze", "s", "ze", "", "equivalent crack spacing parameter", "mm"),

@@ -117,6 +117,15 @@ HOOKS_SUFFICE = _criterion(
     no="Thicker than 15M: a standard hook alone does NOT anchor the stirrups.",
     key="stirrup-hooks",
 )
+CORNERS_HELD = _criterion(
+    "2 <= n_cb",
+    clause="12.13.2",
+    title="Bars in the corners of the stirrups",
+    basis=FROM_MEMORY,
+    yes="A bar stands in each corner of the stirrups, all along the beam.",
+    no="Stirrups stand where bars are missing in their corners: they are NOT anchored there.",
+    key="stirrup-corners",
+)
 
 FORMULAS = (
     TENSION_SIDE,
@@ -135,4 +144,5 @@ CRITERIA = (
     END_SUPPORT_HOLDS,
     HANGERS_PROVIDED,
     HOOKS_SUFFICE,
+    CORNERS_HELD,
 )
