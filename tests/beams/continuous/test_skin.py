@@ -82,6 +82,25 @@ def test_the_slab_takes_a_part_of_the_strip_at_a_support() -> None:
     assert fewer.entries["sag-2/n_k"]["value"] == 3
 
 
+def test_skin_bars_that_leave_a_gap_are_none() -> None:
+    """Given skin bars end at 6.0 m and begin again at 7.0 m: midspan at 7.3 m has them, 6.5 m not.
+
+    In the strip at the support, a quarter of the clear 8.575 m from its face at 3.025 m, so up to
+    5.17 m, they stand.
+    """
+    beam = start(**DEEP)
+    run(beam)
+    rows = [typed_row(each) for each in beam.design.detailing.bars]
+    bars = [row for row in rows if row["place"] != "side face"]
+    size = {"face": "bottom", "bars": "12-10M", "place": "side face"}
+    ends = (("50 mm", "6 m"), ("7 m", "11.95 m"))
+    skin = [{**size, "start": first, "end": last} for first, last in ends]
+    made = record_of(**DEEP, bar_runs=[*bars, *skin])
+    assert made.entries["sag-2/n_k"]["value"] == 0
+    assert "sag-2/skin-area" in made.failed
+    assert made.entries["hog-2-right/n_k"]["value"] == 3
+
+
 def test_a_cantilever_alone_has_skin_bars() -> None:
     """No span sags: the strip at its root alone; 15M top bars, d = 850.7, strip 351.4 mm."""
     made = record_of(

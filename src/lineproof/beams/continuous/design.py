@@ -46,6 +46,7 @@ from lineproof.beams.continuous.detailing_given import (
 from lineproof.beams.continuous.detailing_ties import beside_ties, hook_ties, off_free_ends
 from lineproof.beams.continuous.developed import Developed, developed_at
 from lineproof.beams.continuous.faces import Face
+from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, BeamOutline, Detailing
 from lineproof.beams.continuous.model import Model, outline_of
 from lineproof.beams.continuous.resistance import Standing, stand
@@ -57,7 +58,7 @@ from lineproof.beams.continuous.shear_stretches import (
     stretches_of,
     weaker_of,
 )
-from lineproof.beams.continuous.skin import SideBars, side_bars, skin_runs
+from lineproof.beams.continuous.skin import SideBars, side_bars, skin_runs, stretch_of
 from lineproof.beams.continuous.stirrups_choice import Choice, check_stirrups, choose_stirrups
 from lineproof.beams.inputs import OVERHANGS
 from lineproof.errors import UserError
@@ -133,9 +134,10 @@ class Design:
         """The bars along the beam with the lengths over which their stress rises."""
         return stand(self.designed, self.runs)
 
-    def side_bars(self, span: int, x: float) -> SideBars:
-        """Return the bars of the side faces at a place along the beam."""
-        return side_bars(self.designed, self.detailing.bars, span, x)
+    def side_bars(self, span: int, near: End | None = None) -> SideBars:
+        """Return the bars of the side faces where fewest stand, in a span or near its end."""
+        stretch = stretch_of(self.designed, span, near)
+        return side_bars(self.designed, self.detailing.bars, span, stretch)
 
     @cached_property
     def _skin(self) -> tuple[BarRun, ...]:

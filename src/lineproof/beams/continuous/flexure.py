@@ -14,7 +14,6 @@ from lineproof.beams.bottom_bars import (
 )
 from lineproof.beams.continuous.case_forces import record_forces
 from lineproof.beams.continuous.crack_stress import face_stress, sag_stress
-from lineproof.beams.continuous.cutoff import sag_at
 from lineproof.beams.continuous.design import Design
 from lineproof.beams.continuous.developed import (
     Developed,
@@ -119,8 +118,7 @@ def record_sag(design: Design, span: int) -> None:
             count_standing(steps, key)
             cracks_inside(steps, inputs.exposure, layers, stress=stress, coated=inputs.coated)
         if steps.decide(NEEDS_SKIN):
-            side = design.side_bars(span, sag_at(design.designed, span))
-            record_skin(steps, inputs.exposure, side, "bottom")
+            record_skin(steps, inputs.exposure, design.side_bars(span), "bottom")
 
 
 def _record_strength(
@@ -313,8 +311,7 @@ def _record_face(
         coated=inputs.coated,
     )  # fmt: skip
     if steps.holds(NEEDS_SKIN):
-        x = design.outline.faces(face.span)[0 if face.near == "left" else 1]
-        record_skin(steps, inputs.exposure, design.side_bars(face.span, x), "top")
+        record_skin(steps, inputs.exposure, design.side_bars(face.span, face.near), "top")
     _take(steps, _SHARED)
     made = dict(sheet.part_entries) | dict(counts)
     shared = {name: made[name] for name in _SHARED if name in made}

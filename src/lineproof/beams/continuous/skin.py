@@ -10,9 +10,11 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 
 from lineproof.beams.continuous.anchorage import Bar, develop
 from lineproof.beams.continuous.detailing_data import STOCK, Designed
+from lineproof.beams.continuous.forces import End
 from lineproof.beams.continuous.layout import BarRun, Face
 from lineproof.beams.continuous.numbers import Numbers, holds, put
 from lineproof.beams.continuous.resistance import section_depth
@@ -75,7 +77,31 @@ def side_of(designed: Designed, span: int) -> Side:
     return Side(outline.depths[span - 1], inset, max(inset, outline.h_f))
 
 
-def side_bars(designed: Designed, runs: Sequence[BarRun], span: int, x: float) -> SideBars:
+def stretch_of(designed: Designed, span: int, near: End | None) -> tuple[float, float]:
+    """Return the stretch of a span with a strip in tension, along the beam [mm].
+
+    From below it is the clear length, from above a quarter of it at the ``near`` end, of a
+    cantilever half of it.
+    """
+    start, end = designed.outline.faces(span)
+    if near is None:
+        return start, end
+    reach = (end - start) * (0.5 if designed.cantilever(span) else 0.25)
+    return (start, start + reach) if near == "left" else (end - reach, end)
+
+
+def side_bars(
+    designed: Designed, runs: Sequence[BarRun], span: int, stretch: tuple[float, float]
+) -> SideBars:
+    """Return the bars of the side faces where fewest stand along a stretch; none: 0 each."""
+    start, end = stretch
+    tips = {x for r in runs if r.place == "side face" for x in (r.start, r.end) if start < x < end}
+    middles = [(a + b) / 2 for a, b in pairwise(sorted({start, end} | tips))]
+    found = (_side_bars_at(designed, runs, span, x) for x in (start, *middles, end))
+    return min(found, key=lambda side: side.each)
+
+
+def _side_bars_at(designed: Designed, runs: Sequence[BarRun], span: int, x: float) -> SideBars:
     """Return the bars of the side faces that stand at a place along the beam; none: 0 each.
 
     Of runs that are lapped there the larger number counts.
@@ -103,9 +129,9 @@ def record_skin(steps: Steps, exposure: str, side: SideBars, face: Face) -> None
     """
     A_bk = record_skin_area(steps, exposure, side.size)
     within = side.within(float(steps.entry("h_sk").value), face)
-    source = "none stand at the side faces"
+    source = "somewhere along it none stand at the side faces"
     if side.each:
-        source = f"{side.each} at each face, evenly over the side; those within the strip"
+        source = f"{side.each} at each face where fewest stand, evenly over the side; in the strip"
     record_skin_bars(steps, A_bk, within, source)
 
 
