@@ -107,6 +107,24 @@ def test_recorded_laps() -> None:
     assert list(faults(record.data)) == []
 
 
+def test_a_lap_under_another_layer_is_told() -> None:
+    """Layers of 25M stand 1.4 x 25.2 = 35.3 mm apart; a lapped bar between leaves 35.3 - 25.2 = 10.
+
+    Bars of the second layer that end before the lap, 8.5 to 9.5 m, stand in no one's way.
+    """
+    designed = beam()
+    inner = replace(WHOLE, start=4000.0, end=14000.0)
+    for end, text in ((12000.0, "which is NOT enough"), (8400.0, "one above the other.")):
+        second = replace(WHOLE, layer=2, start=4000.0, end=end)
+        runs = (*split(designed, WHOLE, [9000.0]), inner, second)
+        sheet = sheet_of(designed)
+        writers = writers_of(sheet, designed)
+        record_laps(writers, record_lengths(writers, runs), runs)
+        made = entries(sheet.close().data)
+        assert not made["anchorage-lap-1/lap-room"]["holds"]
+        assert text in made["anchorage-lap-1/one-above-the-other"]["text"]
+
+
 def test_short_laps_fail() -> None:
     """600 mm where 997 are due."""
     designed = beam()

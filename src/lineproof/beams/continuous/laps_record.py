@@ -23,6 +23,12 @@ _CLASS_UNLIKE = (
     "Both bars are spliced at one place: class B, by the length of the thinner bars, and at least "
     "the development length of the thicker ones."
 )
+_ONE_ABOVE = "Side by side there is no room: the lapped bars stand one above the other."
+_UNDER_A_LAYER = (
+    "Side by side there is no room. One above the other the lapped bars take a bar diameter from "
+    "the clear distance to the other layer that stands there, which is NOT enough: the drawings "
+    "move that layer inward along the lap, where d is less by as much, or stagger the laps."
+)
 _AT_LAP = "bars of the layer where most stand along the lap, two that are lapped as one"
 
 
@@ -30,13 +36,14 @@ _AT_LAP = "bars of the layer where most stand along the lap, two that are lapped
 class _Lap:
     """A kind of lap: the thinner and the thicker bar, its length [mm], the tightest row there.
 
-    ``places`` are all that have such a lap.
+    ``places`` are all that have such a lap. ``layered``: another layer stands above or below it.
     """
 
     thin: BarRun
     thick: BarRun
     length: float
     row: Row
+    layered: bool
     places: list[Place] = field(default_factory=list)
 
     @property
@@ -53,18 +60,25 @@ def record_laps(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> N
         (kept[i], kept[j])
         for i, j in sorted(level_pairs(designed.outline, kept), key=lambda p: kept[p[1]].start)
     ]
-    found: dict[tuple[Bar, Bar, float, int, int, Bar], _Lap] = {}
+    found: dict[tuple[Bar, Bar, float, int, int, Bar, bool], _Lap] = {}
     for first, second in pairs:
         thin, thick = sorted((first, second), key=lambda run: run.diameter)
         length = first.end - second.start
         row = tightest(designed.basis, layer_with(designed, kept, first), second.start, first.end)
         widest = bar_of(designed, row.thickest)
         sizes = (bar_of(designed, thin), bar_of(designed, thick))
-        same = (*sizes, length, row.number, row.lapped, widest)
-        lap = found.setdefault(same, _Lap(thin, thick, length, row))
+        layered = any(_beside_layer(run, first, second) for run in kept)
+        same = (*sizes, length, row.number, row.lapped, widest, layered)
+        lap = found.setdefault(same, _Lap(thin, thick, length, row, layered))
         lap.places.append(_place(designed.outline, (first.end + second.start) / 2))
     for number, lap in enumerate(found.values(), start=1):
         _record_lap(writers, lengths, lap, number)
+
+
+def _beside_layer(run: BarRun, first: BarRun, second: BarRun) -> bool:
+    """Tell whether a run stands in another layer of the web, somewhere along a lap."""
+    there = run.face == first.face and run.start < first.end and run.end > second.start
+    return there and run.place == first.place == "web" and run.layer != first.layer
 
 
 def record_crowded(writers: Writers, lengths: Lengths, runs: Iterable[BarRun]) -> None:
@@ -141,7 +155,7 @@ def _record_lap(writers: Writers, lengths: Lengths, lap: _Lap, number: int) -> N
         if not steps.decide(laps.ROOM):
             sheet.note(
                 "one-above-the-other",
-                "Side by side there is no room: the lapped bars stand one above the other.",
+                _UNDER_A_LAYER if lap.layered else _ONE_ABOVE,
                 title="Place of the lap",
                 basis=COMMON_PRACTICE,
             )
