@@ -112,7 +112,7 @@ def test_moment_is_zero_at_a_free_end(tip: float) -> None:
     """A cantilever from a face 150 mm off its axis: from there to the tip, l - 150 mm.
 
     Whether the last bits of the sum change their sign at the tip does not count: 0.25 l_n had
-    stood there by chance, a fourth of the length.
+    stood there by chance, a fourth of the length. A load of 0.6 kN is no point load.
     """
     for spans, kinds, root, side in (
         ((6000.0, tip), ("simple", "simple", "free"), 2, "right"),
@@ -123,7 +123,7 @@ def test_moment_is_zero_at_a_free_end(tip: float) -> None:
             tuple(Support(kind, 0.0 if kind == "free" else 300.0) for kind in kinds),  # type: ignore[arg-type]
         )
         out = 1 + spans.index(tip)
-        loads = [*uniform(spans, 17.3, 7.9), PointLoad("D", out, 48e3, 0.37 * tip)]
+        loads = [*uniform(spans, 17.3, 7.9), PointLoad("D", out, 480, 0.37 * tip)]
         hog = beside_hog(Forces.of(beam, loads), root, side)  # type: ignore[arg-type]
         assert hog.where == "free end"
         assert hog.zero is not None
@@ -132,6 +132,36 @@ def test_moment_is_zero_at_a_free_end(tip: float) -> None:
             record_length(place(sheet), hog)
         # Both places are rounded to whole mm.
         assert sheet.entry("between/l_vf").value == pytest.approx(tip - 150, abs=1.0)
+
+
+def test_between_point_loads_the_force_enters_where_the_moment_falls_fastest() -> None:
+    """A simple span of 6 m, 1.4 x 10 kN/m and 1.4 x 40 kN at 1.5 and 4.5 m.
+
+    R = 14 x 3 + 56 = 98 kN; M = 98 x 3 - 14 x 3^2/2 - 56 x 1.5 = 147 kN.m at midspan and 98 x 1.5 -
+    14 x 1.5^2/2 = 131.25 at the load, so 131.25 of 147 in 1.5 m: all of it in 1.68 m, not in 3 m.
+    """
+    loads = [*uniform((6000.0,), 10, 0), *(PointLoad("D", 1, 40e3, x) for x in (1500.0, 4500.0))]
+    case = case_of((6000.0,), loads, width=0.0, combinations=DEAD_ONLY)
+    found = beside_sag(case.forces, 1)
+    assert found.at == pytest.approx(3000)
+    assert found.zero is not None
+    assert abs(found.zero - found.at) == pytest.approx(1680)
+
+
+def test_a_point_load_on_a_cantilever() -> None:
+    """2.8 m from the axis, face at 150 mm: w = 1.25 x 17.3 + 1.5 x 7.9 = 33.475 kN/m, P = 60 kN.
+
+    P stands at 1.036 m. At the face M = 33.475 x 2.65^2/2 + 60 x 0.886 = 170.70 kN.m, at P 33.475 x
+    1.764^2/2 = 52.08: it falls by 118.62 in 0.886 m, by all of it in 1.275 m, not in 2.65 m.
+    """
+    beam = Beam(
+        (Span(6000.0, 1e14), Span(2800.0, 1e14)),
+        (Support("simple", 300.0), Support("simple", 300.0), Support("free", 0.0)),
+    )
+    loads = [*uniform((6000.0, 2800.0), 17.3, 7.9), PointLoad("D", 2, 48e3, 1036.0)]
+    hog = beside_hog(Forces.of(beam, loads), 2, "right")
+    assert hog.zero == pytest.approx(150 + 1275.0, abs=0.1)
+    assert hog.where == "zero if it fell all the way as from 0.15 to 1.04 m"
 
 
 def test_lengths_as_lines() -> None:

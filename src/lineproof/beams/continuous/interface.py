@@ -5,11 +5,13 @@ from __future__ import annotations
 import math
 import re
 from dataclasses import dataclass
+from itertools import pairwise
 
 import numpy as np
 
+from lineproof.beams.analysis.curves import Curves
 from lineproof.beams.bars import refuse_other_bars
-from lineproof.beams.continuous.forces import End, Forces
+from lineproof.beams.continuous.forces import Demand, End, Forces
 from lineproof.beams.steps import Steps
 from lineproof.errors import UserError
 from lineproof.formula import FROM_MEMORY
@@ -21,6 +23,8 @@ NOT_COVERED = {"check": "Shear between flange and web", "clause": "11.5"}
 """What is said where the bars of the slab are not given."""
 LEAST_SPACING, MOST_SPACING = 50.0, 500.0
 """Spacing of bars of the slab [mm]: closer ones leave no way for concrete, wider ones act apart."""
+POINT_LOAD = 1000.0
+"""Change of shear at a place that is a point load [N]; less is what rounding of a file leaves."""
 _FOUND = "found along the span"
 _LAST_BIT = 1e-6
 """Distance [mm] that is not rounded down to a whole mm: 2799.999999 is 2800."""
@@ -80,6 +84,8 @@ class Beside:
 
     ``zero`` is None where the moment is zero nowhere in the span; ``where`` tells how it was found:
     at the face of a support it is taken as zero, where the moment does not change its sign before.
+    Between point loads the moment falls at other rates: ``zero`` is where it would be zero if it
+    fell at the steepest all the way.
     """
 
     at: float
@@ -92,7 +98,7 @@ def beside_sag(forces: Forces, span: int) -> Beside:
     """Return the largest sagging moment of a span and the nearer of the places of zero moment.
 
     Both are of the case that has the largest moment; the force of the flange enters over the
-    length between them.
+    length between them, where point loads stand between as fast as where it does so fastest.
     """
     most = forces.sag(span)
     curves = forces.solved.solution.span(span)
@@ -102,9 +108,11 @@ def beside_sag(forces: Forces, span: int) -> Beside:
     found = [float(side) for side in (*left[-1:], *right[:1])]
     if not found:
         raise UserError(f"span {span}: its largest moment has no length beside it")
-    zero = min(found, key=lambda x: abs(most.x - x))
-    where = "face of the support" if zero in faces else _FOUND
-    return Beside(most.x, zero, str(most.case), where)
+    made = [
+        _steepest(curves, most, zero, "face of the support" if zero in faces else _FOUND)
+        for zero in found
+    ]
+    return min(made, key=lambda each: abs(most.x - (each.zero or 0.0)))
 
 
 def beside_hog(forces: Forces, support: int, side: End) -> Beside:
@@ -113,13 +121,34 @@ def beside_hog(forces: Forces, support: int, side: End) -> Beside:
     At a free end the moment is zero, whatever the last bits of its sum say.
     """
     demand = forces.hog(support, side)
-    zeros = forces.solved.solution.span(demand.span).inflections(demand.row)
+    curves = forces.solved.solution.span(demand.span)
+    zeros = curves.inflections(demand.row)
     start, end = forces.beam.faces(demand.span)
     free = _free_end(forces, demand.span)
     inside = [float(x) for x in zeros if start < x < end and (free is None or abs(x - free) >= 1)]
     zero = min(inside, key=lambda x: abs(x - demand.x), default=free)
-    where = "free end" if zero is not None and zero == free else _FOUND
-    return Beside(demand.x, zero, str(demand.case), where)
+    if zero is None:
+        return Beside(demand.x, None, str(demand.case))
+    return _steepest(curves, demand, zero, "free end" if zero == free else _FOUND)
+
+
+def _steepest(curves: Curves, demand: Demand, zero: float, where: str) -> Beside:
+    """Return the zero of a moment that falls as fast all the way as between two point loads.
+
+    The least length that leaves: of one piece without point loads inside, the length itself.
+    """
+    row, low, high = demand.row, *sorted((demand.x, zero))
+    heavy = np.abs(curves.P[row]) >= POINT_LOAD
+    inside = [x for x in curves.breaks[heavy].tolist() if low + 1 < x < high - 1]
+    places = sorted([demand.x, *inside, zero], key=lambda x: abs(x - demand.x))
+    M = np.abs(curves.moment(np.array(places))[row])
+    falls = [((M[n] - M[n + 1]) / abs(b - a), a, b) for n, (a, b) in enumerate(pairwise(places))]
+    rate, a, b = max(falls)
+    if len(falls) == 1 or rate * abs(zero - demand.x) <= M[0]:
+        return Beside(demand.x, zero, str(demand.case), where)
+    reached = demand.x + math.copysign(float(M[0] / rate), zero - demand.x)
+    told = f"zero if it fell all the way as from {a / 1000:.2f} to {b / 1000:.2f} m"
+    return Beside(demand.x, reached, str(demand.case), told)
 
 
 def _free_end(forces: Forces, span: int) -> float | None:
