@@ -318,6 +318,16 @@ def test_all_calls_run_and_deflections_are_named_as_not_covered(files: dict[str,
 NO_DEFLECTIONS = tuple(call for call in CALLS if call != "deflections")
 
 
+@pytest.mark.parametrize(("kN", "rows_told"), [(60, 1), (0.5, 0)])
+def test_point_loads_of_a_file_ask_for_hangers(tmp_path: Path, kN: float, rows_told: int) -> None:
+    """A jump of V by at least 1.4 x 60 kN within span 2 is a beam carried there; 0.7 kN is none."""
+    loads = [{"type": "D", "span": 2, "point": f"{kN} kN", "at": "3 m", "what": "beam B3"}]
+    rows = frame_files.rows_of(analysed(loads=loads).model.forces)
+    beam = start(forces_csv=frame_files.write(tmp_path / "frame.csv", rows))
+    found = [row for row in beam.sheet.not_covered if "point loads of the file" in row["check"]]
+    assert [row["clause"] for row in found] == ["11.2.12"] * rows_told
+
+
 def test_no_path_of_the_machine_is_recorded(files: dict[str, Any], tmp_path: Path) -> None:
     assert os.fspath(tmp_path) not in str(record_so_far(analysed(**files)).data)
 

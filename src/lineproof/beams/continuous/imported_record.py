@@ -4,16 +4,19 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import Any
 
 import numpy as np
 
+from lineproof.beams.analysis.envelope import Envelope
 from lineproof.beams.analysis.imported import SMALL_CASE, TOLERANCE, WIDEST_GAP
 from lineproof.beams.continuous.forces import Demand
 from lineproof.beams.continuous.imported_case import case_symbols, printed, record_station, typed
 from lineproof.beams.continuous.imported_forces import ForcesFile, ImportedForces, Piece
 from lineproof.beams.continuous.imported_take_down import record_take_down
 from lineproof.beams.continuous.inputs import ContinuousInputs
+from lineproof.beams.continuous.interface import POINT_LOAD
 from lineproof.beams.continuous.model import ANALYSIS, Model
 from lineproof.beams.continuous.reactions import note_uplift
 from lineproof.beams.continuous.symbols import notation, numbered, required
@@ -38,6 +41,11 @@ _LARGEST = (
     numbered("V_max", "V", "max", "largest size of the shear of a case in a span, imported"),
 )
 _COUPLES = "A change of M over a support is the couple that columns take there."
+_HANGERS_INSIDE = {
+    "check": "Hanger stirrups where beams carried from the side bring in the point loads of the "
+    "file",
+    "clause": "11.2.12",
+}
 _GROUP = 8
 _CASE_COLUMNS = [
     "Combination", "Case", "M, largest, kN.m", "At", "M, smallest, kN.m", "At",
@@ -71,7 +79,22 @@ NOT_COVERED = (
 
 def not_covered(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     """Return what imported forces leave uncovered; nothing for our own analysis."""
-    return [dict(row) for row in NOT_COVERED] if inputs.forces_file is not None else []
+    if inputs.forces_file is None:
+        return []
+    rows: list[Mapping[str, str]] = [dict(row) for row in NOT_COVERED]
+    typed = any(load.form == "point" for load in inputs.loads)  # said of them already
+    if not typed and _jumps_inside(inputs.forces_file.imported.envelope):
+        rows.append(dict(_HANGERS_INSIDE))
+    return rows
+
+
+def _jumps_inside(envelope: Envelope) -> bool:
+    """Tell whether the shear of a case jumps at a station within a span: a point load."""
+    return any(
+        (one.span, one.x) == (other.span, other.x)
+        and float(np.abs(envelope.V[:, n + 1] - envelope.V[:, n]).max()) >= POINT_LOAD
+        for n, (one, other) in enumerate(pairwise(envelope.stations))
+    )
 
 
 def record_imported_analysis(model: Model) -> None:
