@@ -81,6 +81,7 @@ EXAMPLES: dict[str, tuple[Given, Given]] = {
     "bars.FITS_OVERHANG": ({"s_mino": 30, "s_co": 30.5}, {"s_mino": 30, "s_co": -2.83}),
     "cover.DURABLE": ({"c_rs": 30, "c_c": 30}, {"c_rs": 40, "c_c": 30}),
     "cover.DURABLE_BAR": ({"c_rb": 60, "c_b1": 71.3}, {"c_rb": 71.4, "c_b1": 71.3}),
+    "cover.ENDS_COVERED": ({"c_rb": 30, "c_end": 30}, {"c_rb": 30, "c_end": 29}),
     "cover.FIRE_SAFE": ({"c_fire": 25, "c_b1": 41.3}, {"c_fire": 50, "c_b1": 41.3}),
     "cover.FIRE_SAFE_SLAB": ({"h_fire": 130, "h_f": 140}, {"h_fire": 158, "h_f": 140}),
     "cover.STRONG_ENOUGH": ({"f_cmin": 35, "f_c": 35}, {"f_cmin": 35, "f_c": 32}),

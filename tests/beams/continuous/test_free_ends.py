@@ -19,7 +19,7 @@ import pytest
 from lineproof import beams
 from lineproof.beams.continuous.layout import places_of
 
-from .flow import run, start
+from .flow import record_of, run, start
 
 CANTILEVER: Mapping[str, Any] = {
     "spans": ["2.3 m", "7 m"],
@@ -73,3 +73,18 @@ def test_a_free_end_at_the_right_is_its_mirror_image() -> None:
         [b - a for a, b in pairwise(left)][1:-1]
     )
     assert right[0] == pytest.approx(left[0])
+
+
+@pytest.mark.parametrize(("past", "held"), [(170, True), (171, False)])
+def test_given_bars_are_covered_at_their_ends(past: int, *, held: bool) -> None:
+    """Girder of 400 mm: its outer face stands 200 mm from the axis; 30 mm are asked for, N.
+
+    Stirrup of 10M and bars of 20M in concrete of 20 mm stone: max(30, 1 x 19.5, 1 x 20) = 30 mm.
+    """
+    bars = {"bars": "3-20M", "start": f"-{past} mm", "end": "7750 mm"}
+    made = record_of(
+        spans=["7.6 m"], supports=["girder 400 mm", "girder 400 mm"],
+        bar_runs=[{"face": face, **bars} for face in ("bottom", "top")],
+    )  # fmt: skip
+    assert ("cover/cover-ends" not in made.failed) == held
+    assert made.entries["cover/c_end"]["value"] == 200 - past

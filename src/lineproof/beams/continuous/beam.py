@@ -168,7 +168,8 @@ class ContinuousBeam:
             sizes = [layer.size for made in design.bottom.values() for layer in layers_of(made)]
             sizes += [top_of(made).web.size for made in design.top.values()]
         with self.sheet.chapter(FLEXURE_CALL, closing=self._cure):
-            record_cover(self.sheet, self.inputs, sizes or [run.size for run in design.runs])
+            sizes = sizes or [run.size for run in design.runs]
+            record_cover(self.sheet, self.inputs, sizes, design.outline)
             for span in faces.sagging_spans(design.model):
                 flexure.record_sag(design, span)
             for support in self.inputs.held:

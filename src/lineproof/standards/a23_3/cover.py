@@ -113,6 +113,16 @@ DURABLE_BAR = _criterion(
     no="The principal bars are NOT covered as the exposure requires.",
     key="cover-bars",
 )
+ENDS_COVERED = _criterion(
+    "c_rb <= c_end",
+    unit="mm",
+    clause="A23.1 Table 17",
+    title="Cover of the ends of the bars for durability",
+    basis=FROM_MEMORY,
+    yes="The ends of the bars are covered as the exposure requires.",
+    no="The ends of the bars are NOT covered as the exposure requires.",
+    key="cover-ends",
+)
 FIRE_SAFE = _criterion(
     "c_fire <= c_b1",
     clause="NBC D-2.9",
@@ -175,6 +185,7 @@ FORMULAS = (COVER_TO_BARS, COVER_REQUIRED_STIRRUP, COVER_REQUIRED_BAR)
 CRITERIA = (
     DURABLE,
     DURABLE_BAR,
+    ENDS_COVERED,
     FIRE_SAFE,
     FIRE_SAFE_SLAB,
     STRONG_ENOUGH,
