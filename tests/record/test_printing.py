@@ -351,3 +351,23 @@ def test_a_result_half_way_is_rounded_as_it_is_printed() -> None:
     record = sheet.close()
     assert list(faults(record.data)) == []
     assert record.entries["p/M_f"]["printed"]["result"] == "8.24"
+
+
+def test_what_equal_terms_leave_is_nothing_where_it_is_used() -> None:
+    """0.1 + 0.2 - 0.3 is nothing; in floats it leaves 5.55e-17, the rounding of the last bits."""
+    sheet = Sheet("B1")
+    with sheet.part("p", "P"):
+        for name, typed in (("x", "0.1"), ("y", "0.2"), ("z", "0.3"), ("M", "147.2")):
+            sheet.given(name, typed)
+        sheet.line("a = x + y", unit="")
+        sheet.line("r = a - z", unit="")
+        sheet.line("q = M + r", unit="")
+        sheet.line("s = 2*r", unit="")
+    record = sheet.close()
+    assert 0 < record.entries["p/r"]["value"] < 1e-16
+    printed = {key: entry["printed"] for key, entry in record.entries.items()}
+    assert float(printed["p/r"]["result"]) == 0
+    assert printed["p/q"]["args"] == {"M": "147.2", "r": "0"}
+    assert printed["p/s"]["args"] == {"r": "0"}
+    assert float(printed["p/s"]["result"]) == 0
+    assert not recompute(record)

@@ -28,7 +28,7 @@ from lineproof.quantity.units import (
     system_unit,
 )
 from lineproof.record.entry import CHECK, CRITERIA, FOUND, GIVEN, LINE, LOOKUP, VALUES, Entry
-from lineproof.record.standing import Standing, exact_decimal
+from lineproof.record.standing import Standing, exact_decimal, left_of
 from lineproof.record.truth import in_unit, true_substitution, truthful
 from lineproof.record.utilisation import printed_ratio, ratio, sides_for_ratio, utilisation
 
@@ -38,8 +38,6 @@ MOST_PASSES = 24
 """Passes of printing at most; the demo beam settles in eight."""
 _RESIDUAL = 0.01
 """Share of the other side below which a side is but the residual of nearly equal numbers."""
-_LAST_BITS = 1e-11
-"""Part of the largest of its terms below which a sum is nothing but rounding."""
 _LEAST_FOUND = 4
 """Digits that a found value shows at least."""
 
@@ -322,15 +320,11 @@ def _residual_decimals(value: float, other: float) -> int | None:
 
 
 def _left_over(entry: Entry) -> int | None:
-    """Return the decimals of a line of which equal terms leave but the rounding of their last bits.
-
-    Its digits mean nothing, and another processor has others.
-    """
-    kind, scale = UNITS[entry.unit].kind, internal_factor(entry.unit)
-    alike = (abs(arg.value) for arg in entry.args if UNITS[arg.unit].kind == kind)
-    largest = max(alike, default=0.0)
-    if not 0 < abs(entry.value) < _LAST_BITS * largest:
+    """Return the decimals of a line of which equal terms leave but the rounding of last bits."""
+    largest = left_of(entry)
+    if largest is None:
         return None
+    scale = internal_factor(entry.unit)
     return _residual_decimals(entry.value / scale, largest / scale)
 
 

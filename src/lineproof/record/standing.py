@@ -17,9 +17,11 @@ from lineproof.quantity.digits import (
 )
 from lineproof.quantity.quick_digits import PLAIN_BELOW, quick_text
 from lineproof.quantity.units import NOT_METRIC, UNITS, factor, power_of_ten, system_unit
-from lineproof.record.entry import GIVEN, LOOKUP, Entry
+from lineproof.record.entry import GIVEN, LINE, LOOKUP, Entry
 
 _LONGEST_TYPED = 15
+_LAST_BITS = 1e-11
+"""Part of the largest of its terms below which a sum is nothing but rounding."""
 
 
 def exact_decimal(entry: Entry) -> Decimal | None:
@@ -36,16 +38,32 @@ def exact_decimal(entry: Entry) -> Decimal | None:
     return short if len(short.as_tuple().digits) <= longest else None
 
 
+def left_of(entry: Entry) -> float | None:
+    """Return the largest term of a line of which equal terms leave but the rounding of last bits.
+
+    None for any other entry. The digits of such a rest mean nothing, and another processor has
+    others: it is printed as nothing, at its own line and where it is used. In internal units.
+    """
+    if entry.kind != LINE or not entry.value:
+        return None
+    kind = UNITS[entry.unit].kind
+    largest = max((abs(arg.value) for arg in entry.args if UNITS[arg.unit].kind == kind), default=0)
+    return largest if abs(entry.value) < _LAST_BITS * largest else None
+
+
 class Standing:
     """One value as an argument of other lines; each of its texts is made once."""
 
-    __slots__ = ("_least", "_number", "_texts", "entry", "exact", "unit")
+    __slots__ = ("_least", "_nothing", "_number", "_texts", "entry", "exact", "unit")
 
     def __init__(self, entry: Entry) -> None:
         self.entry = entry
         self.unit = entry.unit
         self.exact = exact_decimal(entry)
+        self._nothing = left_of(entry) is not None
         self._number = None if self.exact is None else float(self.exact)
+        if self._nothing:
+            self._number = 0.0
         self._least = max(START_DIGITS, start_digits(entry.value, self.unit))
         self._texts: dict[tuple[int, str], str] = {}
 
@@ -61,6 +79,8 @@ class Standing:
         return known
 
     def _made(self, digits: int, system: System) -> str:
+        if self._nothing:
+            return "0"
         internal = UNITS[self.unit].internal
         target = system_unit(self.unit, system)
         if self.exact is None:
