@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from types import SimpleNamespace
 from typing import Any
 
@@ -16,7 +17,7 @@ from lineproof.standards.a23_3 import shear_bars
 
 from .by_hand import outline
 from .edge_beam import Edge
-from .flow import CALLS, record_of, start
+from .flow import CALLS, record_of, run, start, without_cures
 
 
 @pytest.fixture(scope="module")
@@ -148,3 +149,20 @@ def test_the_tip_of_a_cantilever_is_not_marked_as_exceeded() -> None:
 
     assert not [e for e in record.failed if e.startswith("coverage")]
     assert "exceeded" not in said(record, "moments-1")
+
+
+def test_bars_of_a_row_have_the_area_beside_them() -> None:
+    """At the end of the short span all bars of support 2 run on: its own two would be 400 mm2.
+
+    A heavy load on the long span and a short span behind it: its bars over support 2 reach the end.
+    """
+    column = {"type": "D", "span": 1, "point": "200 kN", "at": "4.5 m", "what": "column above"}
+    beam = start(spans=["9 m", "4 m"], supports=["column 450 mm"] * 3, h="800 mm", loads=[column])
+    rows = table(run(without_cures(beam)).close(), "flexure")
+    areas = {"15M": 200, "20M": 300, "25M": 500, "30M": 700, "35M": 1000}  # CSA G30.18
+    for row in rows:
+        bars = re.findall(r"(\d+)-(\d\dM)( in each overhang)?", row["Bars"])
+        area = sum(int(n) * areas[size] * (2 if both else 1) for n, size, both in bars)
+        assert area == int(row["A_s, mm2"]), row["Place"]
+    assert rows[-1]["Place"] == "support 3, left"
+    assert rows[-1]["Bars"] == rows[-3]["Bars"]

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 
@@ -9,7 +10,7 @@ from lineproof.beams.analysis.arrangements import LIVE
 from lineproof.beams.bars import bars_text
 from lineproof.beams.continuous.deflection_service import deflection_key
 from lineproof.beams.continuous.design import Design
-from lineproof.beams.continuous.developed import bars_of
+from lineproof.beams.continuous.developed import bars_of, developed_key
 from lineproof.beams.continuous.faces import (
     Face,
     faces_of,
@@ -125,7 +126,31 @@ def _hog(design: Design, face: Face) -> Row:
     else:
         case = short_case(model.forces.hog(face.support, face.side).case)
     own, bars = own_face(model, face), bars_at(model, face)
-    return _moment_row(name, case, entries, bars, str(design.top_bars(own) or "none"))
+    return _moment_row(name, case, entries, bars, _top_text(design, own))
+
+
+def _top_text(design: Design, face: Face) -> str:
+    """Name the top bars whose area stands beside them: those of a face, or all that count there.
+
+    Of an end support these may be more than those chosen for it: bars of the next one that run on.
+    """
+    top = design.top_bars(face)
+    parts = {part.key for part in design.model.sheet.parts}
+    if top is None or design.given or developed_key(face.key) not in parts:
+        return str(top or "none")
+    web: dict[int, Counter[str]] = {}
+    beside: Counter[str] = Counter()
+    for run in (each.run for each in design.top_counted(face)):
+        group = beside if run.outside else web.setdefault(run.layer, Counter())
+        group[run.size] += run.number
+    where = "in each overhang" if top.sides > 1 else "in the overhang"
+    texts = [" / ".join(_named(web[layer]) for layer in sorted(web))]
+    texts += [f"{number // top.sides}-{size} {where}" for size, number in beside.items()]
+    return ", ".join(texts)
+
+
+def _named(bars: Mapping[str, int]) -> str:
+    return " + ".join(f"{number}-{size}" for size, number in sorted(bars.items(), reverse=True))
 
 
 def own_face(model: Model, face: Face) -> Face:
