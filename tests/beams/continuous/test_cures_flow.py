@@ -135,6 +135,21 @@ def test_the_spacing_told_holds_in_the_flow() -> None:
     assert not check(checked(SHEAR, stirrups=zones(s + 25)), "shear-1-left/stirrup-spacing")
 
 
+def test_with_an_assumed_restraint_closer_stirrups_are_told_as_well() -> None:
+    """One span whose ends are cast with columns: the restraint adds to the shear there."""
+    slim: Mapping[str, Any] = {
+        "spans": ["9 m"], "supports": ["column 450 mm"] * 2, "b_w": "300 mm",
+        "superimposed": "4 kPa",
+    }  # fmt: skip
+    entry = "shear-1-left-restraint/shear-restraint"
+    wide = sheet_of(SHEAR, **slim, stirrups=zones(400)[:1])
+    s = told(note(wide, "shear-1-left-restraint"), r"stirrups at (\d+) mm or less")
+
+    assert not check(wide, entry)
+    assert check(checked(SHEAR, **slim, stirrups=zones(s)[:1]), entry)
+    assert not check(checked(SHEAR, **slim, stirrups=zones(s + 25)[:1]), entry)
+
+
 def test_where_there_are_no_stirrups_stirrups_are_told() -> None:
     """The zone ends 1.65 m before the right face of span 2; told is the widest that does."""
     gap = sheet_of(SHEAR, stirrups=zones(350))

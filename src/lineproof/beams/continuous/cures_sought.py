@@ -15,7 +15,7 @@ from lineproof.beams.continuous.cures_table import LONGER, MORE_AREA, SOUGHT
 from lineproof.record import Entry, Part
 from lineproof.record.entry import GIVEN, LOOKUP, VALUES
 from lineproof.record.printing import utilisation
-from lineproof.standards.a23_3 import bars, cutoff, development, flexure, minimum
+from lineproof.standards.a23_3 import bars, cutoff, development, flexure, minimum, shear
 from lineproof.standards.a23_3.bars import BARS
 
 _BENDING = (flexure.STRENGTH, flexure.YIELDS, cutoff.SUFFICES)
@@ -221,6 +221,8 @@ def _single(name: str, root: Entry, variable: Variable) -> Sought:
 def _root(name: str, check: Entry, bound: Mapping[str, Entry]) -> Entry | None:
     if name == "s":
         spacing = check.part.entries.get("s")
+        if check.source is shear.RESTRAINT_STRENGTH:  # that of the part of the section itself
+            spacing = next((e for e in behind(bound["V_r"]) if e.symbol == "s"), None)
         return spacing if spacing is not None and spacing.kind == GIVEN else None
     if name in ("b_sp", "n_o", "n_h"):
         return bound.get(name)

@@ -35,6 +35,7 @@ SOUGHT: Mapping[Criterion, tuple[str, ...]] = {
     minimum.SPREAD: ("n_o",),
     crack_control.CRACKS: ("number", "bars"),
     shear.STRENGTH: ("s", *_SECTION),
+    shear.RESTRAINT_STRENGTH: ("s", *_SECTION),
     shear.WEB_HOLDS: _WEB,
     shear_factors.STRAIN_IN_RANGE: ("A_s", "h"),
     shear.SPACING: ("s", "h"),
