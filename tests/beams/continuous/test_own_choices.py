@@ -153,6 +153,21 @@ BEAMS: Mapping[str, Mapping[str, Any]] = {
         "slab_bars": "2 x 10M at 300 mm", "coating": "epoxy", "shear_method": "simplified",
         "minimum_rule": "10.5.1.2", "project": {"codes": {"pair": "NBC 2020 + A23.3:19"}},
     },
+    "a transfer beam": {  # stirrups changed right at the critical section of an assumed restraint
+        "spans": ["9.6 m", "6 m"], "supports": ["column 800 mm"] * 3, "h": "1200 mm",
+        "b_w": "800 mm", "h_f": "250 mm", "spacing": "6 m", "f_c": "40 MPa", "stirrup": "15M",
+        "stirrup_legs": 4, "use": "residential area", "superimposed": "1.5 kPa",
+        "slab_bars": "2 x 10M at 100 mm",
+        "loads": [
+            {"type": "D", "span": 1, "point": "900 kN", "at": "4.8 m", "what": "column, dead"},
+            {"type": "L", "span": 1, "point": "380 kN", "at": "4.8 m", "what": "column, live"},
+            {"type": "S", "span": 1, "point": "60 kN", "at": "4.8 m", "what": "column, snow"},
+            {"type": "D", "span": 1, "point": "110 kN", "at": "2.4 m", "what": "beam, dead"},
+            {"type": "L", "span": 1, "point": "45 kN", "at": "2.4 m", "what": "beam, live"},
+            {"type": "D", "span": 2, "point": "110 kN", "at": "3.0 m", "what": "beam, dead"},
+            {"type": "L", "span": 2, "point": "45 kN", "at": "3.0 m", "what": "beam, live"},
+        ],
+    },
 }  # fmt: skip
 
 

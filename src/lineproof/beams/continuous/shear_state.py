@@ -194,7 +194,7 @@ def span_state(
     for column, w in held.items():
         v["asked"][:, column] = np.maximum(v["asked"][:, column], w["needed"][:, 0])
     room = 1e-6
-    before, after = at < left.x[:, None] - room, at > right.x[:, None] + room
+    before, after = at <= left.x[:, None] + room, at >= right.x[:, None] - room
     before[:, 0] = after[:, 0] = before[:, -1] = after[:, -1] = False
     for name in ("needed", "asked", "s_max", "section", "eps_asked", "V_rmax", "V_c", "V_plain",
                  "V_f", "cot", "counts"):  # fmt: skip
@@ -254,7 +254,9 @@ def _along(
     curves = forces.solved.solution.span(span)
     steps = _steps(*faces)
     inner = [b for b in curves.breaks.tolist() if faces[0] < b < faces[1]]
-    right = [*ends[1].stations, *sorted({*steps, *inner, *extra})]
+    # A critical section is a station as well: stirrups may change between it and the one before.
+    critical = {x for end in ends for x in end.stations[1:] if faces[0] < x < faces[1]}
+    right = [*ends[1].stations, *sorted({*steps, *inner, *extra, *critical})]
     left = [*ends[0].stations, *inner, faces[1]]
     pairs = forces.along(span, np.array(left), "left"), forces.along(span, np.array(right), "right")
     x = np.array([*left, *right])
