@@ -15,6 +15,7 @@ from lineproof.beams.analysis.model import (
     Support,
     UniformLoad,
 )
+from lineproof.beams.continuous.deflection_figure import CHECKED, MIDSPAN, TIP
 from lineproof.beams.continuous.figure_along import in_figures
 from lineproof.beams.continuous.figure_deflection import (
     DeflectionCurve,
@@ -82,6 +83,17 @@ def test_cantilevers_are_readable(lengths: tuple[float, ...]) -> None:
         deflection_figure(beam, deflections(beam, ("immediate", "total"))),
     ):
         assert_readable(figure, DIMENSIONS)
+
+
+def test_a_note_longer_than_the_page_takes_two_lines() -> None:
+    """With a span and a cantilever that are checked the note was cut off at the edge."""
+    beam = outline((6000.0, 3400.0), left=GIRDER, right=FREE_END)
+    note = CHECKED.format(f"{MIDSPAN} and {TIP}")
+    figure = deflection_figure(beam, deflections(beam, ("immediate", "total")), notes=(note,))
+    assert_readable(figure, DIMENSIONS)
+    said = words_of(figure)
+    assert note not in said
+    assert note in " ".join(said)
 
 
 def test_long_beams_take_several_figures() -> None:

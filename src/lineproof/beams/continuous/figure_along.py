@@ -31,6 +31,8 @@ LEFT, RIGHT = 17.0, 4.0
 VALUE, NOTE, TICK_TEXT = 2.4, 2.6, 2.5
 LINE = 3.3
 SAMPLE = 11.0
+_NOTE_START = 2.0
+"""Where notes and samples begin [mm]."""
 THICK = 1.2
 THIN_LINES = "Thin lines: axes of the supports, chained; their faces and the values marked, dotted."
 EXCEEDED = "The resistance is EXCEEDED where the axis is drawn thick."
@@ -231,9 +233,17 @@ def _marks(axes: Axes, band: _Band, way: float) -> list[Shape]:
 
 def _legend(data: Along) -> list[tuple[str, Dash | None]]:
     lines: list[tuple[str, Dash | None]] = [(each.name, each.dash) for each in data.curves]
-    lines += [(note, None) for note in (THIN_LINES, *data.notes)]
-    if data.exceeded:
-        lines.append((EXCEEDED, None))
+    notes = [THIN_LINES, *data.notes, *([EXCEEDED] if data.exceeded else [])]
+    return lines + [(line, None) for note in notes for line in _wrapped(note)]
+
+
+def _wrapped(note: str) -> list[str]:
+    """Return a note in lines that fit on the page."""
+    lines = [""]
+    for word in note.split():
+        longer = f"{lines[-1]} {word}".strip()
+        fits = _NOTE_START + text_width(words(longer), NOTE) <= PAGE_WIDTH
+        lines = [*lines[:-1], longer] if fits else [*lines, word]
     return lines
 
 
@@ -241,10 +251,10 @@ def _draw_legend(legend: Sequence[tuple[str, Dash | None]], top: float) -> list[
     shapes: list[Shape] = []
     for number, (text, dash) in enumerate(legend):
         y = top - 2.0 - number * LINE
-        start = 2.0
+        start = _NOTE_START
         if dash is not None:
-            shapes.append(Line((2.0, y), (2.0 + SAMPLE, y), "curve", MEDIUM, dash))
-            start = 2.0 + SAMPLE + 2.0
+            shapes.append(Line((start, y), (start + SAMPLE, y), "curve", MEDIUM, dash))
+            start += SAMPLE + 2.0
         shapes.append(Text((start, y), words(text), "text", NOTE, "start"))
     return shapes
 
