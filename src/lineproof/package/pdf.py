@@ -27,6 +27,7 @@ if TYPE_CHECKING:
 
 STANDARDS = ["a-3a", "ua-1"]
 _TOO_LONG = "PDF string is longer than"
+_SUSPECTS = b"/Suspects false"
 _local = threading.local()
 
 
@@ -86,7 +87,17 @@ def compile_pdf(source: str, texts: str, date: dt.date) -> bytes:
         raise PrintError(f"Typst: {error.message}\n{error.diagnostic}") from error
     if warnings:
         raise PrintError("Typst: " + "; ".join(warning.message for warning in warnings))
-    return bytes(made)
+    return _without_suspects(bytes(made))
+
+
+def _without_suspects(made: bytes) -> bytes:
+    """Blank ``/Suspects false`` in the catalog: it is the default (ISO 32000-1, table 321).
+
+    Widespread readers take the false itself for a fault and say so for every file. The catalog
+    stands last in the file, and blanks of the same length leave every offset in place.
+    """
+    before, found, after = made.rpartition(_SUSPECTS)
+    return before + b" " * len(found) + after
 
 
 @cache
