@@ -206,6 +206,23 @@ def test_the_heads_of_the_working_do_not_stand_over_the_notation(lines: int) -> 
     assert ("Clause Working Result" in before) != alone
 
 
+@pytest.mark.parametrize("parts", [85, 100])
+def test_the_criteria_stand_below_contents_that_leave_them_room(parts: int) -> None:
+    """In two columns of one height, of 100 parts set closer; they had a page of their own."""
+    rules = {f"rule {n}": "as drawn" for n in range(4)}
+    project = {"codes": {"pair": "NBC 2015 + A23.3-14"}, "criteria": rules}
+    sheet = Sheet("B1", "Widths", project=project)
+    for number in range(parts):
+        with sheet.part(f"p{number}", f"Part of width {number}"):
+            sheet.given(f"b_{number}", "300 mm", "width")
+    pages = pypdf.PdfReader(io.BytesIO(printed(sheet.close().data))).pages
+    text = " ".join(pages[1].extract_text().split())
+    assert text.count("Design criteria") == 2
+    assert f"Part of width {parts - 1} " in text
+    assert text.index("Cautions and what is not covered") < text.rindex("Design criteria")
+    assert "Design criteria" not in pages[2].extract_text()
+
+
 def test_a_clause_to_confirm_stands_whole_on_one_page(record: Record) -> None:
     """Forty clauses of four to six lines each, on several pages: none is parted."""
     package = build_package([record])
