@@ -437,6 +437,25 @@ def test_a_share_without_a_unit_is_refused_without_a_blank_for_it() -> None:
     )
 
 
+def test_a_load_that_lifts_is_not_answered_with_one_that_presses() -> None:
+    """Uplift is calculated by hand: '6 kN/m' in its place would be the opposite."""
+    wind = {"type": "W", "span": 1, "line": "-3 kN/m", "what": "wind"}
+    by_hand = ", and calculate what wind or earthquake does to the beam by hand"
+    lifts = (
+        f"'-3 kN/m' would lift the beam, and loads act downward here; leave the load out{by_hand}"
+    )
+    matches(
+        refused_at_start(loads=[wind]),
+        f"loads, load 1: type 'W'; write one of D, L, L_st, S{by_hand}",
+        f"loads, load 1, line: {lifts}",
+    )
+    matches(refused_at_start(loads=[wind | {"type": "D"}]), f"loads, load 1, line: {lifts}")
+    matches(
+        refused_at_start(loads=[wind | {"type": "D", "line": "-3 m"}]),
+        "loads, load 1, line: '3 m' is a length",
+    )
+
+
 def test_a_number_without_a_unit_is_answered_with_the_unit_that_it_can_stand_in() -> None:
     """7600 m is no span, 4500 MPa no concrete, 24 mm no depth."""
     said = refused_at_start(spans=["7600", "9.2 m", "7.6 m"], h="24", f_c="4500")

@@ -199,6 +199,13 @@ def test_loads_that_ask_for_more_are_named_on_the_cover() -> None:
     clauses = {row["clause"] for row in rows}
     assert {"11.2.12", "NBC 4.1.4.1", "NBC 4.1.6.3"} <= clauses
     plain = {row["clause"] for row in start().sheet.not_covered}
+    walls = ["wall 240 mm"] * 2
+    roof = start(spans=["6 m"], supports=walls, use="roof", snow="1 kPa").sheet.not_covered
+    named = {row["check"].partition(":")[0] for row in roof}
+    assert {"The walls", "Wind that lifts the roof or balcony"} <= named
+    assert not {"The walls", "Wind that lifts the roof or balcony"} & {
+        row["check"].partition(":")[0] for row in start().sheet.not_covered
+    }
     assert not {"11.2.12", "NBC 4.1.4.1", "NBC 4.1.6.3"} & plain
 
 

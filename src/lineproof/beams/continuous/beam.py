@@ -46,6 +46,7 @@ from lineproof.beams.continuous.statics import record_analysis
 from lineproof.beams.continuous.stirrup_corners import CORNERS
 from lineproof.beams.continuous.summary_chapter import SUMMARY, record_summary
 from lineproof.beams.floor_beam import keep_typed, prepare
+from lineproof.beams.inputs import SNOWED_ON
 from lineproof.errors import inputs_named
 from lineproof.quantity import QuantityInput
 from lineproof.record import Part
@@ -320,6 +321,9 @@ def not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     if inputs.stirrup_legs > CORNERS:
         what = "A bar in each bend of the inner stirrups: only the bars of the schedule stand there"
         rows.append({"check": what, "clause": "12.13.3"})
+    if any(support.carrier == "wall" for support in inputs.supports):
+        what = "The walls: bearing is checked for the concrete of the beam, not for masonry"
+        rows.append({"check": what, "clause": "their own calculations"})
     if _ties_unknown(inputs):
         what = "Ties around the hooks where the beam ends: none are given with bars and stirrups"
         rows.append({"check": what, "clause": "12.5.4"})
@@ -357,6 +361,8 @@ def _loads_not_here(inputs: ContinuousInputs) -> list[Mapping[str, str]]:
     if own and (inputs.snow is not None or any(load.kind == "S" for load in inputs.loads)):
         what = "Snow on parts of the beam only: it lies on all spans here"
         rows.append({"check": what, "clause": "NBC 4.1.6.3"})
+    if own and inputs.use in SNOWED_ON:
+        rows.append({"check": "Wind that lifts the roof or balcony", "clause": "NBC 4.1.7"})
     return rows
 
 

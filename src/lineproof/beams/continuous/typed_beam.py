@@ -12,7 +12,7 @@ from lineproof.beams.analysis.model import FarEnd, SupportKind
 from lineproof.beams.continuous.layout import BeamOutline, BuiltSupport, Carrier
 from lineproof.beams.inputs import Range, bare_number, read_in_range
 from lineproof.errors import FaultList, UserError
-from lineproof.quantity import Typed, echo
+from lineproof.quantity import QuantityInput, Typed, echo
 
 CARRIERS: tuple[Carrier, ...] = ("column", "girder", "wall")
 MOST_SPANS = 24
@@ -208,6 +208,7 @@ def _read_column(name: str, given: object) -> TypedColumn:
 
 
 _KEYS = {"type", "span", "line", "area", "point", "width", "from", "to", "at", "what"}
+_BY_HAND = ", and calculate what wind or earthquake does to the beam by hand"
 _FORMS: Mapping[Form, Range] = {"line": LINE_LOAD, "area": AREA_LOAD, "point": POINT_LOAD}
 _LOAD_SAMPLE = (
     "{'type': 'L', 'span': 2, 'point': '40 kN', 'at': '3.1 m', 'what': 'reaction of beam B12'}"
@@ -239,12 +240,13 @@ def _read_load(name: str, given: object, lengths: Sequence[Typed]) -> TypedLoad:
     if given.get("type") not in GRAVITY_TYPES:
         faults.add(
             f"{name}: type {echo(given.get('type'))}; write one of {', '.join(GRAVITY_TYPES)}"
+            f"{_BY_HAND if given.get('type') in LOAD_TYPES else ''}"
         )
     spans = _try(faults, _span_numbers, name, given.get("span"), len(lengths)) or ()
     if len(forms) != 1:
         faults.raise_if_any()
     form = forms[0]
-    size = _try(faults, read_in_range, f"{name}, {form}", given[form], _FORMS[form])
+    size = _try(faults, _read_size, f"{name}, {form}", given[form], _FORMS[form])
     width = _part(faults, name, given, "width", LOADED_WIDTH, needed=form == "area")
     ends = {key: _part(faults, name, given, key, PLACE, needed="from" in given or "to" in given)
             for key in ("from", "to")}  # fmt: skip
@@ -257,6 +259,17 @@ def _read_load(name: str, given: object, lengths: Sequence[Typed]) -> TypedLoad:
         str(given["type"]), spans, form, size, str(given.get("what", "")).strip() or "load given",
         width, ends["from"], ends["to"], at,
     )  # fmt: skip
+
+
+def _read_size(name: str, given: QuantityInput, allowed: Range) -> Typed:
+    """Read the size of a load, which acts downward: one typed with a minus is meant to lift."""
+    if isinstance(given, str) and given.strip().startswith(("-", "\u2212")):
+        read_in_range(name, given.strip()[1:].strip(), allowed)
+        raise UserError(
+            f"{name}: {echo(given)} would lift the beam, and loads act downward here; leave the "
+            f"load out{_BY_HAND}"
+        )
+    return read_in_range(name, given, allowed)
 
 
 def _part(

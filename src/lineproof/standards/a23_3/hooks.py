@@ -53,7 +53,7 @@ DENSITY_FACTORS = LookupTable(
 )
 COATING_FACTORS = LookupTable(
     "Hooks: factor for coating",
-    "coating of the hook",
+    "coating of the bars",
     {"k_he": ""},
     {"epoxy": {"k_he": "1.2"}, "none": {"k_he": "1.0"}},
     "A23.3, 12.5.3",
