@@ -243,6 +243,20 @@ def test_zone_of_stirrups() -> None:
     assert first.mass == pytest.approx(14.784)
 
 
+def test_distances_of_a_zone_add_up_as_printed() -> None:
+    """22 stirrups at 275 mm over a clear 5960 mm, the outer ones 47.5 mm from face and last one.
+
+    47.5 + 21 x 275 = 5822.5; as 48 and 5822 they did not add up.
+    """
+    beam = outline((6200.0,), left=COLUMN, right=COLUMN)
+    face = beam.faces(1)[0]
+    zone = StirrupZone(1, face + 47.5, face + 47.5 + 21 * 275.0, 22, 275.0, "10M", 2)
+    (row,) = stirrup_table(schedule(beam, Detailing((), (zone,)))).rows
+    spacing, number, first, last = (float(cell) for cell in row[4:8])
+    assert (spacing, number, first) == (275, 22, 47.5)
+    assert first + (number - 1) * spacing == last
+
+
 def test_bars_longer_than_stock() -> None:
     """By the cut length: 11 900 mm with two hooks is over 12 m, without hooks it is not."""
     long = BarRun("top", 1, 2, "25M", 0.0, 11900.0, hook_start="90", hook_end="90", mark="T01")

@@ -58,7 +58,7 @@ def stirrup_table(bars: Schedule) -> PrintedTable:
         zone = each.zone
         rows.append((
             str(zone.span), zone.mark, zone.size, str(zone.legs), _spacing(zone),
-            str(zone.number), f"{each.first:.0f}", f"{each.last:.0f}",
+            str(zone.number), _place(each.first), _place(each.last),
             _form(zone),
             " + ".join(_outside(shape) for shape, _ in each.pieces),
             " + ".join(f"{_times(count)}{shape.cut:.0f}" for shape, count in each.pieces),
@@ -79,7 +79,12 @@ def _times(count: int) -> str:
 
 
 def _spacing(zone: StirrupZone) -> str:
-    return f"{zone.spacing:.0f}" if zone.number > 1 else DASH
+    return _place(zone.spacing) if zone.number > 1 else DASH
+
+
+def _place(distance: float) -> str:
+    """Print a distance [mm], half a millimetre too: first, spacings and last add up as printed."""
+    return f"{round(distance, 1):.10g}"
 
 
 def _outside(shape: BentShape) -> str:
