@@ -64,6 +64,17 @@ def test_no_choice_fails_its_own_check(records: dict[str, Record], coating: str)
     assert ("coated with epoxy" in said) == (coating == "epoxy")
 
 
+@pytest.mark.parametrize("coating", ["none", "epoxy"])
+def test_drawing_and_schedule_name_the_coating(records: dict[str, Record], coating: str) -> None:
+    """Who orders bars by the schedule or places them by the elevation sees neither page 1."""
+    entries, coated = records[coating].entries, coating == "epoxy"
+    shapes = entries["summary/elevation-1"]["figure"]["shapes"]
+    said = [run[0] for each in shapes for run in each.get("runs", ())]
+    assert ("All bars and stirrups are coated with epoxy." in said) == coated
+    total = entries["schedule/bars"]["rows"][-1]
+    assert (total[0], "all coated with epoxy" in total) == ("Total", coated)
+
+
 def test_another_coating_is_refused() -> None:
     with pytest.raises(UserError) as caught:
         start(**PARKADE, coating="galvanized")

@@ -64,9 +64,9 @@ def test_elevation_is_readable(count: int) -> None:
 def test_other_ends_and_depths(left: object, right: object, depths: tuple[float, ...]) -> None:
     """Girders, columns and free ends; shallow beams and steps of depth."""
     beam = outline((2800.0, 8000.0, 2400.0), left=left, right=right, depths=depths)  # type: ignore[arg-type]
-    figure = elevation_figure(beam, marked(beam, closed=True))
-
-    assert_readable(figure, SOLID)
+    for coated in (False, True):
+        figure = elevation_figure(beam, marked(beam, closed=True), coated=coated)
+        assert_readable(figure, SOLID)
 
 
 @pytest.mark.parametrize("lengths", [(800.0, 900.0), (30000.0,) * 2, (3000.0,) * 6])

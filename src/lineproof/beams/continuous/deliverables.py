@@ -48,7 +48,9 @@ def record_schedule(design: Design) -> None:
     sheet = design.model.sheet
     rests = _rests_on(sheet)
     with sheet.part(SCHEDULE, "Schedules and quantities"):
-        _table(sheet, "bars", bar_table(made), "bar-schedule", FIRST_SCHEDULE, rests)
+        coated = design.model.inputs.coated
+        listed = bar_table(made, coated=coated)
+        _table(sheet, "bars", listed, "bar-schedule", FIRST_SCHEDULE, rests)
         for number, figure in enumerate(bends_figures(made.items), start=1):
             _figure(sheet, f"bends-{number}", figure, FIRST_SCHEDULE + 1, rests)
         _table(sheet, "stirrup-schedule", stirrup_table(made), "stirrup-schedule",
@@ -116,8 +118,9 @@ def record_drawings(design: Design, front: int) -> None:
     marks = tuple((letter, x) for letter, x, _ in sections)
     grade = bends_as(design.model.inputs.grade)
     drawn = elevation_figures(
-        design.outline, made.detailing, sections=marks, short=_short(design), grade=grade
-    )
+        design.outline, made.detailing, sections=marks, short=_short(design), grade=grade,
+        coated=design.model.inputs.coated,
+    )  # fmt: skip
     for number, figure in enumerate(drawn, start=1):
         dxf = "elevation" if len(drawn) == 1 else f"elevation-{number}"
         _figure(sheet, f"elevation-{number}", figure, front, rests, dxf=dxf)

@@ -37,6 +37,7 @@ HEAD = 4.5
 """Room for the names of the supports over the rows of bars, mm on paper."""
 NOTE, LETTER = 2.6, 2.8
 MANY = 3
+COATED = "All bars and stirrups are coated with epoxy."
 FEW_LINES, MANY_LINES = (16.5, 3.6), (15.6, 3.3)
 """How far below the bars the first of the notes stands and the next follows, mm on paper."""
 Section = tuple[str, float]
@@ -50,11 +51,18 @@ def elevation_figures(
     sections: Sequence[Section] = (),
     short: Sequence[Short] = (),
     grade: str = "400R",
+    coated: bool = False,
 ) -> tuple[Figure, ...]:
     """Return the elevation in rows of spans, each at a scale that can be read on the page."""
     return tuple(
         elevation_figure(
-            outline, detailing, spans=spans, sections=sections, short=short, grade=grade
+            outline,
+            detailing,
+            spans=spans,
+            sections=sections,
+            short=short,
+            grade=grade,
+            coated=coated,
         )
         for spans in parts(outline)
     )
@@ -68,10 +76,11 @@ def elevation_figure(
     sections: Sequence[Section] = (),
     short: Sequence[Short] = (),
     grade: str = "400R",
+    coated: bool = False,
 ) -> Figure:
     """Draw the spans given (the whole beam without) on the width of the page.
 
-    Stretches ``short`` of bars are hatched. ``detailing`` has its marks
+    Stretches ``short`` of bars are hatched; ``coated`` bars are named. ``detailing`` has its marks
     (:func:`lineproof.beams.continuous.schedule.schedule`).
     """
     seen = view(outline, detailing, spans or (1, len(outline.lengths)))
@@ -82,7 +91,7 @@ def elevation_figure(
     zones, zone_height = zone_block(seen, detailing.stirrups, -seen.deepest * seen.scale - STUB)
     first_low = -seen.deepest * seen.scale - STUB - zone_height - 2.0
     lows, floor = levels(rows_down, first_low, -1)
-    notes = _note_lines(seen, detailing, short)
+    notes = [*_note_lines(seen, detailing, short), *([COATED] if coated else [])]
     shapes = [
         *axis_lines(seen, ceiling, floor - 11.0),
         *concrete(seen),

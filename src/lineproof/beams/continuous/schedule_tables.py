@@ -27,14 +27,15 @@ class PrintedTable:
     rows: tuple[tuple[str, ...], ...]
 
 
-def bar_table(bars: Schedule) -> PrintedTable:
-    """Return the bar schedule, its total mass in the last row."""
+def bar_table(bars: Schedule, *, coated: bool = False) -> PrintedTable:
+    """Return the bar schedule, its total mass in the last row, which names ``coated`` bars."""
     columns = (
         "Mark", "Size", "Number", "Cut length, mm", "Shape", "Code", "Legs, mm", "For",
         "kg each", "kg",
     )  # fmt: skip
     rows = [_bar_row(item) for item in bars.items]
-    rows.append(("Total", *[""] * (len(columns) - 2), f"{bars.mass:.1f}"))
+    kind = "all coated with epoxy" if coated else ""
+    rows.append(("Total", "", "", "", kind, *[""] * (len(columns) - 6), f"{bars.mass:.1f}"))
     return PrintedTable("Bar schedule", columns, tuple(rows))
 
 
