@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import io
 from collections.abc import Iterator
+from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 import pypdf
@@ -83,6 +84,25 @@ BROKEN_WORDS = """() => {
     }
     return broken;
 }"""
+
+
+def test_words_of_a_table_keep_room_on_a_narrow_screen(browser: Browser, tmp_path: Path) -> None:
+    """What would cure the failing checks stood one word a line, on 390 px, over many screens."""
+    existing = read_calc(folder("calcs") / "existing-beam.ipynb")
+    path = tmp_path / "existing-beam.html"
+    path.write_text(to_html(build_package([existing.record], [existing.walk])), encoding="utf-8")
+    context = browser.new_context(viewport={"width": 390, "height": 1000}, offline=True)
+    page = context.new_page()
+    page.goto(path.as_uri())
+    heads = page.locator("th", has_text="What would cure it")
+    assert heads.count() == 1
+    box, letter = (
+        heads.bounding_box(),
+        heads.evaluate("e => parseFloat(getComputedStyle(e).fontSize)"),
+    )
+    context.close()
+    assert box is not None
+    assert box["width"] >= 16 * letter
 
 
 @pytest.mark.parametrize("width", [1400, 900, 390])
