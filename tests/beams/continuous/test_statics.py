@@ -209,6 +209,12 @@ def test_loads_that_ask_for_more_are_named_on_the_cover() -> None:
     assert not {"11.2.12", "NBC 4.1.4.1", "NBC 4.1.6.3"} & plain
 
 
+def test_a_rectangular_beam_has_no_overhangs_to_speak_of() -> None:
+    bare = start(shape="rectangular", h_f=None, floor_weight="3.4 kPa")
+    texts = [beam.sheet.entry("given/choices").source.text for beam in (start(), bare)]
+    assert ["overhangs" in text for text in texts] == [True, False]
+
+
 def test_the_load_cases_are_listed() -> None:
     """Three spans: 1.4D once, two combinations with live load on seven placements (9.2.3.1)."""
     beam = analysed()

@@ -109,6 +109,11 @@ def record_given(sheet: Sheet, inputs: ContinuousInputs) -> None:
         sheet.note("choices", _choices_text(inputs), title="Choices")
 
 
+_OVERHANGS = (
+    " Top bars in the overhangs are the beam's own: bars of the slab are not counted for it."
+)
+
+
 def one_depth(inputs: ContinuousInputs) -> bool:
     """Tell whether all spans have the same depth."""
     return len({depth.value for depth in inputs.depths}) == 1
@@ -129,8 +134,8 @@ def _choices_text(inputs: ContinuousInputs) -> str:
         f"concrete; use: {inputs.use}; exposure class {inputs.exposure}; fire-resistance rating "
         f"{inputs.fire_rating}, type {inputs.fire_aggregate} concrete; stirrups {inputs.stirrup}; "
         f"shear by the {inputs.shear_method} method; minimum reinforcement by "
-        f"{inputs.minimum_rule}; carries: {inputs.carries}. Bars in compression are not counted. "
-        "Top bars in the overhangs are the beam's own: bars of the slab are not counted for it."
+        f"{inputs.minimum_rule}; carries: {inputs.carries}. Bars in compression are not counted."
+        f"{_OVERHANGS if inputs.slab else ''}"
     )
 
 
