@@ -209,6 +209,17 @@ def test_loads_that_ask_for_more_are_named_on_the_cover() -> None:
     assert not {"11.2.12", "NBC 4.1.4.1", "NBC 4.1.6.3"} & plain
 
 
+def test_a_load_on_a_cantilever_at_the_left_stands_from_its_free_end() -> None:
+    """There is no axis at the left of it; 'left' alone was taken for the support."""
+    load = {"point": "10 kN", "at": "0.5 m", "what": "facade", "type": "D"}
+    sheet = analysed(
+        spans=["2 m", "6 m"], supports=["free", "column 450 mm", "column 450 mm"],
+        loads=[load | {"span": 1}, load | {"span": 2}],
+    ).sheet  # fmt: skip
+    said = [str(sheet.notation[f"a_x{n}"].meaning) for n in (1, 2)]
+    assert said == ["facade: from the free end", "facade: from the left axis"]
+
+
 def test_a_rectangular_beam_has_no_overhangs_to_speak_of() -> None:
     bare = start(shape="rectangular", h_f=None, floor_weight="3.4 kPa")
     texts = [beam.sheet.entry("given/choices").source.text for beam in (start(), bare)]

@@ -66,17 +66,19 @@ def _column_symbols(support: int, columns: int) -> Iterator[Symbol]:
 
 def _load_symbols(inputs: ContinuousInputs) -> Iterator[Symbol]:
     for letter, items in (
-        ("x", [load for load, _ in single_loads(inputs)]),
-        ("y", whole_span_loads(inputs)),
+        ("x", single_loads(inputs)),
+        ("y", [(load, 0) for load in whole_span_loads(inputs)]),
     ):
-        for number, load in enumerate(items, start=1):
+        for number, (load, span) in enumerate(items, start=1):
             name = f"{letter}{number}"
             yield numbered(f"w_{name}", "w", name, load.what)
             yield numbered(f"q_{name}", "q", name, f"{load.what}, per area")
             yield numbered(f"b_{name}", "b", name, f"{load.what}: loaded width")
             if letter == "x":
                 yield numbered(f"P_{name}", "P", name, load.what)
-                yield numbered(f"a_{name}", "a", name, f"{load.what}: from the left axis")
+                free = span == 1 and inputs.supports[0].kind == "free"
+                origin = "from the free end" if free else "from the left axis"
+                yield numbered(f"a_{name}", "a", name, f"{load.what}: {origin}")
                 yield numbered(f"s_{name}", "s", name, f"{load.what}: begins at")
                 yield numbered(f"e_{name}", "e", name, f"{load.what}: ends at")
 
