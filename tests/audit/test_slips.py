@@ -319,7 +319,7 @@ def test_the_result_of_another_place_is_not_the_argument_of_this_one() -> None:
     graph = Graph(sheet.close())
     claim = hand.typed(graph, "span-1/b_f", "1566")
     found = find_slips(graph, "span-1/b_f", {}, claim, dict.fromkeys(graph.nodes, ""))
-    assert "the term b_o (1.2, ) counted twice" in found[0].sentence.partition(". The")[0]
+    assert "the term b_o (1.2) counted twice" in found[0].sentence.partition(". The")[0]
 
 
 def test_nobody_writes_a_zero_in_front() -> None:

@@ -118,7 +118,8 @@ class Cause:
 
     ``replaced`` and ``took`` are the ids of the value replaced and of the one taken for it, where
     a value was put for another. ``above`` tells that it was made before the claimed line, where
-    nobody claimed anything, ``usual`` that it is a mistake known by name.
+    nobody claimed anything, ``usual`` that it is a mistake known by name. ``published`` tells a
+    value that another document prints; against ``contradicted`` another claimed line speaks.
     """
 
     words: str
@@ -126,6 +127,8 @@ class Cause:
     took: str = ""
     above: bool = False
     usual: bool = False
+    published: bool = False
+    contradicted: bool = False
 
 
 @dataclass(frozen=True, slots=True)

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import replace
 
-from lineproof.audit.claims.other_methods import Bench
+from lineproof.audit.claims.bench import Bench
 from lineproof.audit.claims.propagate import Form
 from lineproof.audit.claims.safe_side import SIDES, errs_safely
 from lineproof.audit.data import Claim, Judged, Verdict

@@ -7,10 +7,10 @@ one of opposite sign among others is a slip.
 
 from __future__ import annotations
 
-from collections.abc import Container, Hashable, Mapping, Sequence
+from collections.abc import Container, Hashable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 
-from lineproof.audit.data import Claim
+from lineproof.audit.data import Claim, Judged
 from lineproof.audit.graph import Graph, Node, Number
 from lineproof.audit.slips.scope import stem
 from lineproof.quantity.units import UNITS
@@ -85,6 +85,17 @@ def _follows(graph: Graph, claim: Claim, values: Mapping[str, Number]) -> bool:
 def in_our_signs(claims: Sequence[Claim], convention: Convention) -> list[Claim]:
     """Return claims with those of another sign convention read in the calc's own signs."""
     return [_turned(claim) if claim.id in convention.ids else claim for claim in claims]
+
+
+def as_typed(judged: Iterable[Judged], claims: Iterable[Claim]) -> Iterator[Judged]:
+    """Give judgements with what was typed, whatever sign it was read with."""
+    typed = {claim.id: claim.typed for claim in claims}
+    for each in judged:
+        claim = each.claim
+        if claim is None or claim.typed == typed[claim.id]:
+            yield each
+        else:
+            yield replace(each, claim=replace(claim, typed=typed[claim.id]))
 
 
 def _has_sign(graph: Graph, claim: Claim) -> bool:

@@ -7,22 +7,56 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from dataclasses import replace
 
-from lineproof.audit.claims.other_methods import Other
-from lineproof.audit.data import Cause, Claim, Slip
+from lineproof.audit.claims.bench import Bench, Other
+from lineproof.audit.claims.handbook import works_others
+from lineproof.audit.data import Cause, Claim, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph
+from lineproof.audit.slips.rank import reproduced
 
 _SAME = 1e-6
 
 
+def beside(
+    bench: Bench,
+    read: Judged,
+    slips: Sequence[Slip],
+    way: Other | None = None,
+    *,
+    loosely: bool = False,
+    coarse: bool = False,
+) -> Judged:
+    """Judge a line that was read as no error: doubtful where a likely slip gives the claim as well.
+
+    ``loosely`` and ``coarse`` are those of :func:`plausible`. A reading of a table by somebody who
+    may well read all of them stays one, and a constant of another document is told beside it.
+    """
+    claim = read.claim
+    if claim is None:
+        return read
+    unsafe = read.verdict is Verdict.UNSAFE_ROUNDING
+    found = plausible(bench, slips, claim, way, places=unsafe, loosely=loosely, coarse=coarse)
+    if found is not None:
+        slip, cause = found
+        note = f"{read.note}; the same value is {reproduced(cause, slip.value, claim)}"
+        return replace(read, verdict=Verdict.DOUBTFUL, note=note, slips=first_of(slips, slip))
+    if way is not None and way.is_read:
+        other = plausible(bench, slips, claim, way, coarse=True)
+        if other is not None:
+            return replace(read, note=f"{read.note}, or with {other[1].words}")
+    return read
+
+
 def plausible(
-    graph: Graph,
+    bench: Bench,
     slips: Sequence[Slip],
     claim: Claim,
     way: Other | None = None,
     *,
     places: bool = False,
     loosely: bool = False,
+    coarse: bool = False,
 ) -> tuple[Slip, Cause] | None:
     """Return the likeliest slip that gives a claim to its last digit, and which of its causes.
 
@@ -31,16 +65,24 @@ def plausible(
 
     None if there is none. Only mistakes that a checker knows by name count, made in the line
     itself: of slips that have as many ways as a number has digits, a place other quantities, or a
-    calc unclaimed lines, one fits most numbers. Nor does what is nothing but the other ``way``,
-    which puts its own values, or a copy of what is the same number by rights. The same quantity of
-    another place counts where ``places`` is true: beside a reading to the unsafe side.
+    calc unclaimed lines, one fits most numbers. Two readings are weaker. Beside a ``coarse``
+    rounding a constant of another document counts that was used in a line between, of which there
+    are few; beside a table, where the author worked such a line elsewhere, any mistake there does
+    that is known by name. Nothing but the other ``way``, which puts its own values, counts as
+    little as a copy of what is the same number by rights. The same quantity of another place counts
+    where ``places`` is true: beside a reading to the unsafe side.
     """
+    graph = bench.graph
+    worked = way is not None and way.is_read and works_others(bench, graph[claim.id])
 
     def known(cause: Cause) -> bool:
+        if cause.above:
+            near = worked or (coarse and cause.published)
+            return near and cause.usual and not cause.contradicted
         return cause.usual or (places and _is_elsewhere(graph, cause))
 
-    near = (slip for slip in slips if loosely or claim.stands_for.holds(slip.value))
-    pairs = ((slip, cause) for slip in near for cause in slip.causes)
+    given = (slip for slip in slips if loosely or claim.stands_for.holds(slip.value))
+    pairs = ((slip, cause) for slip in given for cause in slip.causes)
     return next(
         (p for p in pairs if known(p[1]) and not _is_same(graph, p[1], claim) and _counts(*p, way)),
         None,
@@ -67,8 +109,6 @@ def _is_same(graph: Graph, cause: Cause, claim: Claim) -> bool:
 
 
 def _counts(slip: Slip, cause: Cause, way: Other | None) -> bool:
-    if cause.above:
-        return False
     if way is None:
         return True
     same = math.isclose(slip.value, way.interval.middle, rel_tol=_SAME)

@@ -2,19 +2,20 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from itertools import chain
 
 from lineproof.audit.claims.bar_sizes import by_sizes
-from lineproof.audit.claims.conventions import Convention, convention_of, in_our_signs
+from lineproof.audit.claims.bench import Bench, Other
+from lineproof.audit.claims.conventions import Convention, as_typed, convention_of, in_our_signs
 from lineproof.audit.claims.divided import divided_terms
-from lineproof.audit.claims.doubt import first_of, plausible
+from lineproof.audit.claims.doubt import beside, plausible
 from lineproof.audit.claims.habit import HABIT, numbers_of, others_made
 from lineproof.audit.claims.in_steps import STEPS, in_steps
 from lineproof.audit.claims.mixed_digits import MixedDigits
 from lineproof.audit.claims.on_the_way import FOLLOWS, OnTheWay
-from lineproof.audit.claims.other_methods import Bench, Other, other_ways
+from lineproof.audit.claims.other_methods import other_ways
 from lineproof.audit.claims.propagate import Worker
 from lineproof.audit.claims.readings import Rounded, coarse_roundings, unit_slip
 from lineproof.audit.claims.rewritten import used_as_written, worked_rightly
@@ -30,7 +31,6 @@ from lineproof.audit.claims.worlds import (
 )
 from lineproof.audit.data import Claim, Interval, Judged, Slip, Verdict
 from lineproof.audit.graph import Graph, Node
-from lineproof.audit.slips.rank import reproduced
 from lineproof.record.entry import DECISION
 from lineproof.typeset.values import told
 
@@ -60,17 +60,9 @@ def judge(
     in another sign ``convention``, sought if it is not given, are read in the calc's own signs, and
     keep what was typed.
     """
-    typed = {claim.id: claim.typed for claim in claims}
     signs = convention or convention_of(graph, claims)
     found = _Judge(graph, in_our_signs(claims, signs), find).all()
-    return tuple(_as_typed(each, typed) for each in found)
-
-
-def _as_typed(judged: Judged, typed: Mapping[str, str]) -> Judged:
-    claim = judged.claim
-    if claim is None or claim.typed == typed[claim.id]:
-        return judged
-    return replace(judged, claim=replace(claim, typed=typed[claim.id]))
+    return tuple(as_typed(found, claims))
 
 
 class _Judge:
@@ -312,7 +304,8 @@ class _Judge:
                 if rounded.usual or safe:
                     said = self._rounded(node, claim, judged, rounded, safe=safe)
                     elsewhere = not safe and not judged.follows.holds(rounded.of)
-                    return self._beside_a_slip(node, claim, said, loosely=elsewhere)
+                    coarse = rounded.is_coarse
+                    return self._beside_a_slip(node, claim, said, loosely=elsewhere, coarse=coarse)
         return None
 
     def _beside_a_slip(
@@ -323,22 +316,19 @@ class _Judge:
         way: Other | None = None,
         *,
         loosely: bool = False,
+        coarse: bool = False,
     ) -> Judged:
         """Judge a line with a reading that is no error: doubtful where a slip is likely as well."""
-        slips, unsafe = self._slips(node, claim), read.verdict is Verdict.UNSAFE_ROUNDING
-        found = plausible(self.graph, slips, claim, way, places=unsafe, loosely=loosely)
-        if found is None:
-            return replace(read, slips=slips if read.verdict in WRONG else ())
-        slip, cause = found
-        note = f"{read.note}; the same value is {reproduced(cause, slip.value, claim)}"
-        return replace(read, verdict=Verdict.DOUBTFUL, note=note, slips=first_of(slips, slip))
+        slips = self._slips(node, claim)
+        read = replace(read, slips=slips if read.verdict in WRONG else ())
+        return beside(self.claimed_bench, read, slips, way, loosely=loosely, coarse=coarse)
 
     def _in_doubt(self, entry_id: str) -> bool:
         """Tell whether a likely slip gives a claim as well as its rounding does."""
         if entry_id not in self.doubted:
             claim = self.claims[entry_id]
             slips = self._slips(self.graph[entry_id], claim)
-            self.doubted[entry_id] = plausible(self.graph, slips, claim) is not None
+            self.doubted[entry_id] = plausible(self.claimed_bench, slips, claim) is not None
         return self.doubted[entry_id]
 
     def _other_way(self, node: Node, claim: Claim) -> Other | None:

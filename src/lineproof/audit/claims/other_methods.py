@@ -6,17 +6,16 @@ the interval that follows by it from the values that the claim itself uses.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Iterator, Mapping
-from dataclasses import dataclass
+from collections.abc import Callable, Iterator, Mapping
 
+from lineproof.audit.claims.bench import Bench, Other
 from lineproof.audit.claims.coefficient_moments import by_coefficients
+from lineproof.audit.claims.handbook import by_table
 from lineproof.audit.claims.live_loads import by_reduction
-from lineproof.audit.claims.propagate import Form, Worker, World, combined
-from lineproof.audit.data import Claim, Interval
-from lineproof.audit.graph import Graph, Node
+from lineproof.audit.claims.propagate import Form, combined
+from lineproof.audit.graph import Node
 from lineproof.formula import names_of, parse_line
 from lineproof.formula.compiled import NOT_COMPUTED, compile_tree
-from lineproof.quantity.digits import significant
 from lineproof.record.entry import LINE, LOOKUP
 from lineproof.standards.a23_3 import crack_control
 
@@ -32,96 +31,6 @@ _MODULI = ("E_c = 4500*sqrt(f_c)", "E_c = (3300*sqrt(f_c) + 6900)*(gamma_c/2300)
 """A23.3, 8.6.2.3 and 8.6.2.2."""
 _MODULUS_LEAST, _MODULUS_CONCRETE = 20.0, 40.0
 """Concrete of normal density of 20 to 40 MPa has the short expression (8.6.2.3)."""
-_WIDTHS = ("b", "b_f", "b_w")
-_TABLE_DECIMALS = 1
-_LEAST_READ = 1.0
-"""A table of K_r [MPa] is read by hand to a tenth, which is two digits from 1 up."""
-_RATIO_DECIMALS = 4
-"""Decimals to which tables give a ratio of reinforcement."""
-_ROUNDING = 1e-9
-
-
-@dataclass(frozen=True, slots=True)
-class Other:
-    """What another way gives, and the sentence that names it.
-
-    ``replaced`` are the ids of the lines that it works otherwise, ``took`` of those whose values
-    it uses in their place.
-    """
-
-    sentence: str
-    interval: Interval
-    replaced: tuple[str, ...] = ()
-    took: tuple[str, ...] = ()
-
-
-@dataclass(frozen=True, slots=True)
-class Bench:
-    """What the ways work with: the graph, its functions, a world of values, and the claims."""
-
-    worker: Worker
-    world: World
-    claims: Mapping[str, Claim]
-
-    @property
-    def graph(self) -> Graph:
-        """The record as a graph."""
-        return self.worker.graph
-
-    def reworked(self, node: Node, swapped: Mapping[str, Form]) -> Form:
-        """Work a line with other forms of some that it rests on; claimed lines stay as claimed."""
-        if node.id in swapped:
-            return swapped[node.id]
-        made = dict(self.world.used) | dict(swapped)
-        moved = set(self.graph.below(swapped))
-        between = (moved & set(self.graph.above([node.id]))) - set(self.claims) - set(swapped)
-        for entry_id in self.graph.nodes:
-            if entry_id in between and self.graph[entry_id].is_computed:
-                made[entry_id] = self.worker.form(self.graph[entry_id], made)
-        return self.worker.form(node, made)
-
-    def by(
-        self, node: Node, swapped: Mapping[str, Form], sentence: str, took: Iterable[str] = ()
-    ) -> Iterator[Other]:
-        """Give a line worked with other forms of some that it rests on, as another way.
-
-        A way is taken as a whole: where a line that it works otherwise is claimed with the value
-        of the recorded way, what rests on it was not worked by the other.
-        """
-        above = set(self.graph.above([node.id]))
-        for entry_id in above.intersection(swapped):
-            claim = self.claims.get(entry_id)
-            if claim is not None and not claim.stands_for.overlaps(swapped[entry_id].interval):
-                return
-        yield Other(sentence, self.reworked(node, swapped).interval, tuple(swapped), tuple(took))
-
-    def beside(self, node: Node, symbol: str) -> Form | None:
-        """Return the form of a symbol in the part of a line, if it stands there."""
-        return self.world.used.get(f"{node.part}/{symbol}")
-
-    def above(self, node: Node, symbols: tuple[str, ...]) -> Form | None:
-        """Return the form of the first of some names that a line, or what it rests on, uses.
-
-        Looked for in the line, in those that it names, and in those above in the same part.
-        """
-        above = [self.graph[i] for i in reversed(self.graph.above([node.id]))]
-        named = set(node.args.values())
-        near = [node, *(n for n in above if n.id in named or n.part == node.part)]
-        for symbol in symbols:
-            for user in near:
-                if symbol in user.args:
-                    return self.world.used[user.args[symbol]]
-        return None
-
-    def meant(self, node: Node, part: str, symbol: str) -> list[Form]:
-        """Return the forms that a symbol has in a line and in a part, or of all in the calc.
-
-        Neither beta nor theta names the strengths that limit a method: V_c and V_s beside them do.
-        """
-        near = (n for n in self.graph if n.part == part or n.id == node.id)
-        ids = {n.args[symbol] for n in near if symbol in n.args}
-        ids = ids or {n.id for n in self.graph if n.has_value and n.symbol == symbol}
-        return [self.world.used[i] for i in ids]
 
 
 def other_ways(bench: Bench, node: Node) -> Iterator[Other]:
@@ -268,67 +177,6 @@ def _stress_allowance(bench: Bench, node: Node) -> Iterator[Other]:
             yield from bench.by(node, swapped, sentence)
 
 
-def _table_resistance(bench: Bench, node: Node) -> Iterator[Other]:
-    """M_r = K_r b d^2 with K_r read from a table to two digits."""
-    if node.symbol != "M_r" or node.unit not in ("kN.m", "N.mm", "kip.ft", "kip.in"):
-        return
-    if _was_worked(bench, node):
-        return
-    width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
-    if width is None or depth is None:
-        return
-    scale = combined(lambda b, d: b * d**2, [width, depth])
-    factor = combined(lambda m, s: m / s, [bench.world.follows[node.id], Form(scale.middle)])
-    for read in _readings(factor.interval, _TABLE_DECIMALS):
-        if read >= _LEAST_READ:
-            yield Other(
-                f"follows with K_r read from a table as {read:g} (two digits) in M_r = K_r b d2",
-                scale.interval.times(read),
-            )
-
-
-def _table_ratio(bench: Bench, node: Node) -> Iterator[Other]:
-    """A_s = rho b d with rho read from a table to four decimals."""
-    if not node.symbol.startswith("A_s") or node.unit not in ("mm2", "in2"):
-        return
-    if _was_worked(bench, node):
-        return
-    width, depth = bench.above(node, _WIDTHS), bench.above(node, ("d",))
-    if width is None or depth is None:
-        return
-    area = combined(lambda b, d: b * d, [width, depth])
-    ratio = combined(lambda a, s: a / s, [bench.world.follows[node.id], Form(area.middle)])
-    for read in _readings(ratio.interval, _RATIO_DECIMALS):
-        if read >= 10 ** (1 - _RATIO_DECIMALS):  # two digits at least
-            yield Other(
-                f"follows with the ratio read from a table as {read:g} in A_s = rho b d",
-                area.interval.times(read),
-            )
-
-
-def _was_worked(bench: Bench, node: Node) -> bool:
-    """Tell whether a line's formula was worked, for which a table gives the result at once.
-
-    Who wrote down the depth of the stress block did not read K_r, which is there to do without.
-    A factor of the materials, which has no unit, is written down with a table as well.
-    """
-    graph = bench.graph
-    args = [target for name, target in node.args.items() if name not in (*_WIDTHS, "d")]
-    return any(
-        target in bench.claims
-        and graph[target].is_computed
-        and graph[target].unit
-        and not graph[target].symbol.startswith("A_s")
-        for target in args
-    )
-
-
-def _readings(interval: Interval, decimals: int) -> tuple[float, ...]:
-    """Return a table's readings, to so many decimals, of a number somewhere in an interval."""
-    ends = (interval.low * (1 - _ROUNDING), interval.middle, interval.high * (1 + _ROUNDING))
-    return tuple(dict.fromkeys(float(significant(end, -decimals)) for end in ends))
-
-
 def _coefficients(bench: Bench, node: Node) -> Iterator[Other]:
     for sentence, interval in by_coefficients(bench.graph, bench.world.used, node):
         yield Other(sentence, interval, (node.id,))
@@ -341,6 +189,6 @@ def _reduced_load(bench: Bench, node: Node) -> Iterator[Other]:
 
 
 _WAYS: tuple[Callable[[Bench, Node], Iterator[Other]], ...] = (
-    _shear, _development, _modulus, _midspan_inertia, _stress_allowance, _table_resistance,
-    _table_ratio, _coefficients, _reduced_load,
+    _shear, _development, _modulus, _midspan_inertia, _stress_allowance, by_table, _coefficients,
+    _reduced_load,
 )  # fmt: skip

@@ -81,7 +81,8 @@ class Rounded:
     ``usual`` tells the nearest multiple, and digits cut off behind the last one; another multiple
     is taken by nobody but to be on the safe side. ``alone`` tells that it may be a rounding even
     where no other number of the sheet is rounded so: it moves the value little, and has fewer
-    digits.
+    digits. ``is_coarse`` tells that it has a digit less than it shows, or was built so: no
+    rounding of a line between gives it.
     """
 
     of: float
@@ -89,6 +90,7 @@ class Rounded:
     up: bool
     usual: bool
     alone: bool
+    is_coarse: bool
 
 
 def coarse_roundings(claim: Claim, symbol: str, follows: Iterable[Interval]) -> Iterator[Rounded]:
@@ -114,7 +116,8 @@ def coarse_roundings(claim: Claim, symbol: str, follows: Iterable[Interval]) -> 
             if number % step == 0 and far < 1:
                 up = abs(claim.value) > abs(of)
                 usual = far <= _HALF or (count == 1 and not up)
-                yield Rounded(of, _plain(step), up, usual, alone and count not in by_habit)
+                alone_too = alone and count not in by_habit
+                yield Rounded(of, _plain(step), up, usual, alone_too, is_coarse=count > 1)
 
 
 def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:

@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-from lineproof.audit.claims.other_methods import Bench
+from lineproof.audit.claims.bench import Bench
 from lineproof.audit.claims.worlds import next_claimed
 from lineproof.audit.data import Claim
 from lineproof.audit.graph import Node

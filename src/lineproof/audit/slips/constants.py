@@ -16,7 +16,13 @@ class Other(NamedTuple):
     value: float
     source: str
 
+    @property
+    def is_published(self) -> bool:
+        """Tell whether another document prints it for the same thing, which its source names."""
+        return any(name in self.source for name in _DOCUMENTS)
 
+
+_DOCUMENTS = ("ACI 318", "A23.3-", "Eurocode", "NBC", "AASHTO")
 _ACI = "ACI 318M"
 _94 = "A23.3-94"
 _84 = "A23.3-M84 and older"

@@ -30,7 +30,7 @@ class Edit(NamedTuple):
 
     ``far`` counts against it: by so much (natural logarithm) it is less likely than its family.
     ``swap`` are the ids of the value that is replaced and of the one that is taken for it, where
-    the edit puts a value for another.
+    the edit puts a value for another. ``published`` tells a value that another document prints.
     """
 
     family: str
@@ -40,6 +40,7 @@ class Edit(NamedTuple):
     words: Callable[[], str]
     far: float = 0.0
     swap: tuple[str, str] = ("", "")
+    published: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -95,7 +96,7 @@ def words_of(scope: Scope, entry_id: str, name: str = "") -> str:
     """Return a value in words: ``b_w (1.11, width of the web)``."""
     node = scope.graph[entry_id]
     symbol = scope.symbols[entry_id]
-    inside = f"{node.label}, {node.title}" if node.label else node.title
+    inside = ", ".join(filter(None, (node.label, node.title)))
     own = "" if name in ("", symbol) else f"{symbol}, "
     return f"{name or symbol} ({own}{inside})"
 

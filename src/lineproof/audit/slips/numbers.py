@@ -53,7 +53,8 @@ def _other_constants(
     if symbol != own:
         others = (*others, *of_constant(symbol, text, is_load=False))
     for other in others:
-        yield Edit("edition", at, other.value, 0.0, partial(_constant_said, other, text))
+        words = partial(_constant_said, other, text)
+        yield Edit("edition", at, other.value, 0.0, words, published=other.is_published)
 
 
 def _constant_said(other: Other, text: str) -> str:

@@ -15,7 +15,8 @@ from lineproof.typeset.values import told
 class Other(NamedTuple):
     """Another value for a quantity: family, value, half width, words, and how far-fetched.
 
-    ``took`` is the id of the line whose value it is, where it is that of another line.
+    ``took`` is the id of the line whose value it is, where it is that of another line;
+    ``published`` tells a value that another document prints.
     """
 
     family: str
@@ -24,11 +25,12 @@ class Other(NamedTuple):
     words: Callable[[], str]
     far: float = 0.0
     took: str = ""
+    published: bool = False
 
     def edit(self, at: tuple[int, ...], replaced: str, far: float = 0.0) -> Edit:
         """Return the edit that puts it at some places for the value with the id ``replaced``."""
-        swap = (replaced, self.took)
-        return Edit(self.family, at, self.value, self.half, self.words, self.far + far, swap)
+        swap, far = (replaced, self.took), self.far + far
+        return Edit(self.family, at, self.value, self.half, self.words, far, swap, self.published)
 
 
 def shown(line: Line, entry_id: str, value: float | None = None) -> str:

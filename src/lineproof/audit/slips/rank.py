@@ -35,7 +35,7 @@ class Fit(NamedTuple):
     """An edit that reproduces the claim: its value and half width at the claim, and its share.
 
     ``where`` says in which line, if not in the claimed one; ``above`` is that line's id and ``own``
-    its value with the slip.
+    its value with the slip. ``against`` is a claimed line that would show the slip, and does not.
     """
 
     edit: Edit
@@ -45,6 +45,7 @@ class Fit(NamedTuple):
     where: str = ""
     above: str = ""
     own: float = 0.0
+    against: str = ""
 
 
 def shares(edits: Sequence[Edit]) -> dict[str, float]:
@@ -101,9 +102,14 @@ def _slip(group: Group, claim: Claim) -> Slip:
 
 def _cause(fit: Fit) -> Cause:
     edit = fit.edit
-    words = f"{edit.words()}{fit.where}"
-    usual = FAMILIES[edit.family].usual
-    return Cause(words, *edit.swap, above=bool(fit.where), usual=usual)
+    return Cause(
+        f"{edit.words()}{fit.where}",
+        *edit.swap,
+        above=bool(fit.where),
+        usual=FAMILIES[edit.family].usual,
+        published=edit.published,
+        contradicted=bool(fit.against),
+    )
 
 
 class Group(NamedTuple):

@@ -191,7 +191,8 @@ class SlipSearch:
             if witness:
                 name = words_of(self._scope, witness)
                 where = f"{fit.where}, though {name} rests on it as well and is right"
-                weighed[at] = fit._replace(share=fit.share * CONTRADICTED, where=where)
+                share = fit.share * CONTRADICTED
+                weighed[at] = fit._replace(share=share, where=where, against=witness)
         return weighed
 
     def _line(self, entry_id: str) -> Line | None:

@@ -125,10 +125,11 @@ def _tables(line: Line, target: str, name: str) -> Iterator[Other]:
     value = line.pairs[target][0]
     # beta_g and theta_g are beta and theta of the other method, f_yt the f_y of stirrups.
     key = symbol if symbol in BY_SYMBOL else name
-    for new, source in BY_SYMBOL.get(key, ()):
+    for published in BY_SYMBOL.get(key, ()):
+        new, source = published
         said = partial(_changed, line, target, name, new, "", f" ({source})")
         if not math.isclose(new, value):
-            yield Other("edition", new, 0.0, said)
+            yield Other("edition", new, 0.0, said, published=published.is_published)
     for new in ROWS.get(symbol, ()):
         if not math.isclose(new, value):
             said = partial(_changed, line, target, name, new, ", another row of the table")
