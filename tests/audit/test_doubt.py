@@ -105,6 +105,25 @@ def test_a_rounding_of_other_values_than_claimed_is_doubted_for_a_slip_with_thes
     assert (told in note) is (expected is Verdict.DOUBTFUL)
 
 
+@pytest.mark.parametrize(
+    ("clear", "expected"), [("5.4 m", Verdict.SAFE_ROUNDING), ("5.64 m", Verdict.DOUBTFUL)]
+)
+def test_nor_is_one_to_the_safe_side_taken_for_granted(clear: str, expected: Verdict) -> None:
+    """w_f = 22.4 + 20 = 42.4 kN/m gives 127.2 kN, which 130 may round up; but 46.3 is claimed.
+
+    With that and l_n for l it is 46.25 x 5.64/2 = 130.43 to 46.35 x 5.64/2 = 130.71, so that 130
+    follows within the digits of 46.3; with 5.4 m it is 125 kN.
+    """
+    made = {"w_f = w_D + w_L": "kN/m", "V_f = w_f*l/2": "kN"}
+    given = {"w_D": "22.4 kN/m", "w_L": "20 kN/m", "l": "6 m", "l_n": clear, "V_r": "140 kN"}
+    sheet = sheet_of(made, given)
+    with sheet.part("checks", "Span 1: checks"):
+        sheet.check("V_f <= V_r", key="shear", title="Shear resistance")
+    verdict, note = said_of(sheet.close(), {"beam/w_f": "46.3", "beam/V_f": "130"}, "beam/V_f")
+    assert verdict is expected
+    assert note.startswith("127.20 kN rounded up to a step of 10 kN: conservative")
+
+
 def test_a_slip_that_is_no_rounding_stays_an_origin() -> None:
     assert said_of(shear(), {"beam/V_f": "119.9"}, "beam/V_f")[0] is Verdict.ORIGIN
 
@@ -324,14 +343,18 @@ def test_a_length_that_is_set_out_is_rounded_to_25_mm() -> None:
 def test_areas_and_deflections_are_not_rounded_as_sizes_are() -> None:
     """A_s 3 x 304 = 912: 910 is a digit less, 925 on a step of 25 is nothing.
 
+    A_sb 87 x 304 = 26 448: 26 000 is a digit less, 26 500 on a step of 500 is nothing.
+
     delta_L = 0.35 x 3.25 = 1.1375 mm: 1.13 is cut off, 1.15 on a step of 0.05 is nothing.
     """
-    lines = {"A_s = n_b*A_b": "mm2", "delta_L = k_1*a": "mm"}
-    givens = {"n_b": "3", "A_b": "304 mm2", "k_1": "0.35", "a": "3.25 mm"}
+    lines = {"A_s = n_b*A_b": "mm2", "A_sb = n_o*A_b": "mm2", "delta_L = k_1*a": "mm"}
+    givens = {"n_b": "3", "n_o": "87", "A_b": "304 mm2", "k_1": "0.35", "a": "3.25 mm"}
     record = sheet_of(lines, givens).close()
     cases = {
         ("A_s", "910"): Verdict.SAFE_ROUNDING,
         ("A_s", "925"): Verdict.ORIGIN,
+        ("A_sb", "26000"): Verdict.SAFE_ROUNDING,
+        ("A_sb", "26500"): Verdict.ORIGIN,
         ("delta_L", "1.13"): Verdict.SAFE_ROUNDING,
         ("delta_L", "1.15"): Verdict.ORIGIN,
     }

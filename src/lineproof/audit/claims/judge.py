@@ -303,7 +303,7 @@ class _Judge:
                 safe = errs_safely(self.graph, node.id, claim.value, rounded.of)
                 if rounded.usual or safe:
                     said = self._rounded(node, claim, judged, rounded, safe=safe)
-                    elsewhere = not safe and not judged.follows.holds(rounded.of)
+                    elsewhere = not judged.follows.holds(rounded.of)
                     coarse = rounded.is_coarse
                     return self._beside_a_slip(node, claim, said, loosely=elsewhere, coarse=coarse)
         return None

@@ -24,6 +24,8 @@ _BY_HABIT = (5,)
 _BUILT = (5, 10)
 """Steps for sizes and areas; a size is in whole millimetres, a deflection to a tenth is none."""
 _SIZE = 1.0
+_LARGE_AREA = 50.0
+"""Half a step in mm2 from which an area is rounded as any number: nobody makes it 26 500 so."""
 _LAID_OUT = frozenset((
     "s", "s_b", "s_f", "s_tie", "s_max", "s_v", "l", "l_n", "l_d", "l_dh", "l_s", "l_lp", "l_in",
     "l_e", "l_ext", "x_e", "x_co", "b_w", "b_f", "b_o", "b_s", "b_tr", "h", "h_f", "h_min",
@@ -127,7 +129,8 @@ def _steps(claim: Claim, symbol: str) -> tuple[int, ...]:
         return ()
     if is_set_out(claim, symbol):
         return _SET_OUT
-    return _BUILT if _is_size(claim) or UNITS[claim.unit].kind == "area" else _DIGIT_LESS
+    is_area = UNITS[claim.unit].kind == "area" and claim.stands_for.half < _LARGE_AREA
+    return _BUILT if _is_size(claim) or is_area else _DIGIT_LESS
 
 
 def is_set_out(claim: Claim, symbol: str) -> bool:
