@@ -11,8 +11,8 @@ from tests.audit.hand import beam, typed
 from tests.beams.gallery import record_of
 
 from lineproof.audit.audit import audit_claims
-from lineproof.audit.data import Effect, Finding, Severity
-from lineproof.audit.findings import importance
+from lineproof.audit.data import Cause, Effect, Finding, Interval, Judged, Severity, Slip, Verdict
+from lineproof.audit.findings import findings_of, importance
 from lineproof.audit.graph import Graph
 from lineproof.audit.review.data import Review, Reviewer
 from lineproof.audit.review.findings import with_findings
@@ -242,3 +242,43 @@ def test_an_unlikely_slip_is_told_as_chance_where_two_may_stand_behind_it() -> N
     assert "It may fit by chance: see whether two slips were made in this line." in two.advice
     (one,) = found(beam(), {**right, "strength/M_r": "243"})
     assert "by chance" not in one.advice
+
+
+@pytest.mark.parametrize(
+    ("likely", "usual", "by_chance"),
+    [
+        (0.11, True, False),
+        (0.09, True, True),
+        (0.09, False, False),
+        (0.02, False, True),
+    ],
+)
+def test_a_mistake_known_by_name_may_fit_by_chance_as_well(
+    likely: float, *, usual: bool, by_chance: bool
+) -> None:
+    """The shares are set here; a slip of 0.02 that is none known by name fits many a number."""
+    advice = advice_on(slip("phi_s", likely, usual=usual))
+    assert advice.startswith("With phi_s left out.")
+    assert ("may fit by chance" in advice) is by_chance
+
+
+@pytest.mark.parametrize(("second", "told"), [(0.41, True), (0.39, False)])
+def test_a_slip_as_likely_as_the_first_is_told_with_it(second: float, *, told: bool) -> None:
+    """0.8 x 0.5 = 0.4: from so much on the second is told beside the first."""
+    advice = advice_on(slip("phi_s", 0.5), slip("A_s", second))
+    said = "With phi_s left out. Nearly as likely: With A_s left out."
+    assert advice.startswith(said) is told
+
+
+def slip(name: str, likely: float, *, usual: bool = True) -> Slip:
+    cause = Cause("", usual=usual)
+    return Slip("factor left out", f"with {name} left out.", 243e6, likely, causes=(cause,))
+
+
+def advice_on(*slips: Slip) -> str:
+    """Return the advice on a resistance of 243 for 206.6 kN.m with these slips behind it."""
+    graph = Graph(beam())
+    claim = typed(graph, "strength/M_r", "243")
+    judged = Judged(claim.id, Verdict.ORIGIN, claim, Interval(206e6, 207e6), 206.6e6, slips=slips)
+    (finding,) = findings_of(graph, [judged])
+    return finding.advice
