@@ -189,6 +189,18 @@ def test_a_procedure_not_known_here_is_told_once() -> None:
     assert "a guess of version 1 is not known here" in unknown.what
 
 
+def test_a_setting_that_a_procedure_does_not_have_is_told() -> None:
+    def add(data: dict[str, Any]) -> None:
+        for part in data["parts"]:
+            for entry in part["entries"]:
+                if entry["id"] == "second-path/c_l":
+                    entry["settings"] = {"depth": 2.0}
+
+    found = audit_record(edited(demo("tee-section"), add))
+    (line,) = said(found, "cannot be worked again")
+    assert "has no setting 'depth'" in line.what
+
+
 def test_a_record_with_code_in_a_formula_is_refused() -> None:
     data = copy.deepcopy(demo("tee-section").data)
     line = next(e for p in data["parts"] for e in p["entries"] if e["kind"] == "line")

@@ -8,6 +8,9 @@ from __future__ import annotations
 from collections.abc import Callable, Collection, Mapping
 from dataclasses import dataclass
 
+from lineproof.errors import UserError
+from lineproof.quantity import echo
+
 PROCEDURES: dict[str, Procedure] = {}
 
 
@@ -52,7 +55,27 @@ def recall(name: str, version: int) -> Procedure | None:
 
 
 def run(made: Procedure, values: Mapping[str, float], settings: Mapping[str, float]) -> float:
-    """Run a procedure on named values."""
-    if made.by_name:
-        return float(made.function(values, **settings))
-    return float(made.function(*[values[name] for name in made.names], **settings))
+    """Run a procedure on named values.
+
+    Raises :class:`UserError` for arguments or settings that it does not take, as a record changed
+    by hand may name.
+    """
+    if not made.takes(values):
+        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names)}")
+    given = (values,) if made.by_name else tuple(values[name] for name in made.names)
+    try:
+        return float(made.function(*given, **settings))
+    except TypeError:
+        unknown = _not_taken(made, settings)
+        if unknown:
+            raise UserError(
+                f"procedure {made.name!r} has no setting {', '.join(map(echo, unknown))}"
+            ) from None
+        raise
+
+
+def _not_taken(made: Procedure, settings: Mapping[str, float]) -> list[str]:
+    from inspect import signature  # noqa: PLC0415 - 10 ms, for a fault alone
+
+    known = signature(made.function).parameters
+    return [name for name in settings if name not in known]

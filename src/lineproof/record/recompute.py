@@ -139,8 +139,6 @@ def _found(entry: Data, so_far: _SoFar) -> list[Finding]:
     if made is None:
         raise UserError(f"procedure {entry['procedure']['name']!r} is not known here")
     named = so_far.named(entry["args"])
-    if not made.takes(named):
-        raise UserError(f"procedure {made.name!r} takes {', '.join(made.names)}")
     value = run(made, named, entry["settings"])
     if not math.isfinite(value):
         raise UserError(f"procedure {made.name!r} finds no finite number")
