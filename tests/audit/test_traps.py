@@ -13,6 +13,7 @@ from lineproof.audit.data import Finding, Severity
 from lineproof.audit.search.traps import TRAPS, trap_findings, traps_met
 from lineproof.audit.search.traps_view import Trap
 from lineproof.audit.slips.kinds import FAMILIES
+from lineproof.sheet import Sheet
 
 from .altered import NAMES, changed, demo, edited
 from .trap_cases import SECTION, SHEAR, STIRRUPS, Case, project
@@ -64,6 +65,23 @@ def test_no_false_alarm_in_the_simple_beam() -> None:
 
 def test_no_false_alarm_with_a_cantilever_a_fixed_end_and_single_loads() -> None:
     assert trap_findings(record_of(**MIXED)) == ()
+
+
+@pytest.mark.parametrize(
+    ("codes", "said"),
+    [
+        ({"pair": "NBC 2015 + A23.3-14"}, ()),
+        ({"concrete": "A23.3-04"}, ("A23.3-04 are no pair that goes together.",)),
+    ],
+)
+def test_a_calc_of_its_own_may_name_its_codes_in_part(
+    codes: dict[str, str], said: tuple[str, ...]
+) -> None:
+    sheet = Sheet("J1", "Own sheet")
+    sheet.codes = codes
+    with sheet.part("given", "Given"):
+        sheet.given("h", "600 mm", "overall depth")
+    assert tuple(finding.what for finding in trap_findings(sheet.close())) == said
 
 
 @pytest.mark.parametrize("case", CASES, ids=lambda case: f"{case.number} {case.said[:50]}")

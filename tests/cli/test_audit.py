@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import csv
 import json
+import math
 import os
 import subprocess
 import sys
@@ -16,8 +17,11 @@ from tests.audit import hand
 from tests.audit.hand import beam as hand_beam
 from tests.beams import gallery
 
+from lineproof.audit.data import Audit, Interval, Judged, Verdict
+from lineproof.audit.graph import Graph
 from lineproof.audit.review.read import read_review
 from lineproof.cli import main
+from lineproof.cli.audit_output import as_data
 from lineproof.errors import UserError
 from lineproof.notebook.audited import picked
 
@@ -114,6 +118,18 @@ def test_json_tells_every_claim(record_file: Path, tmp_path: Path, capsys: Captu
     assert line["follows"] == pytest.approx([538.95, 538.95])
     assert audit(record_file, "--claims", claims(tmp_path, M_r="209 kN.m")) == 0
     assert "K_r read from a table as 1.8" in capsys.readouterr().out
+
+
+def test_what_absurd_claims_lead_to_is_none_in_json() -> None:
+    """A force of 1e99 beside a resistance of 1e-99 leaves a ratio anywhere: no number of JSON."""
+    graph = Graph(hand_beam())
+    claim = hand.typed(graph, "beam/a", "65.0")
+    everywhere = Interval(-math.inf, math.inf)
+    judged = Judged(claim.id, Verdict.AGREES, claim, everywhere, graph.stored[claim.id])
+    (line,) = json.loads(json.dumps(as_data(Audit("H1", "", (judged,)), graph), allow_nan=False))[
+        "judged"
+    ]
+    assert line["follows"] == [None, None]
 
 
 @pytest.mark.parametrize(("option", "count"), [("--blank", 19), ("--blank-full", 20)])

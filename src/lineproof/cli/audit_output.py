@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections import Counter
 from collections.abc import Iterator
 from typing import Any
@@ -100,7 +101,8 @@ def as_data(audit: Audit, graph: Graph | None) -> dict[str, Any]:
     It holds ``calc``, ``digest``, ``counts``, ``judged``, ``findings``, ``shared`` (sentences on
     slips that several findings have in common) and ``notes``.
 
-    Values of a judged line stand in ``unit``, the unit in which the line prints.
+    Values of a judged line stand in ``unit``, the unit in which the line prints; one that is no
+    finite number is none.
     """
     counts = Counter(str(judged.verdict) for judged in audit.judged)
     claimed = [j for j in audit.judged if j.claim is not None]
@@ -126,8 +128,8 @@ def _judged(judged: Judged, node: Node) -> dict[str, Any]:
         "row": claim.row if claim is not None else 0,
         "where": claim.where if claim is not None else "",
         "unit": node.unit,
-        "follows": [judged.follows.low / factor, judged.follows.high / factor],
-        "right": judged.right / factor,
+        "follows": [_finite(end / factor) for end in (judged.follows.low, judged.follows.high)],
+        "right": _finite(judged.right / factor),
         "shown": shown(node, judged.right),
         "note": judged.note,
         "slips": [_slip(slip, factor) for slip in judged.slips[:MOST_SLIPS]],
@@ -136,7 +138,12 @@ def _judged(judged: Judged, node: Node) -> dict[str, Any]:
 
 
 def _slip(slip: Slip, factor: float) -> dict[str, Any]:
-    return {"kind": slip.kind, "sentence": slip.sentence, "value": slip.value / factor}
+    return {"kind": slip.kind, "sentence": slip.sentence, "value": _finite(slip.value / factor)}
+
+
+def _finite(value: float | None) -> float | None:
+    """Return a number as JSON may hold it: none for what absurd claims lead to."""
+    return value if value is not None and math.isfinite(value) else None
 
 
 def _finding_data(finding: Finding) -> dict[str, Any]:
@@ -154,8 +161,8 @@ def _finding_data(finding: Finding) -> dict[str, Any]:
 def _effect(effect: Effect) -> dict[str, Any]:
     return {
         "check": effect.check,
-        "claimed": effect.claimed,
-        "right": effect.right,
+        "claimed": _finite(effect.claimed),
+        "right": _finite(effect.right),
         "holds_as_claimed": effect.holds_as_claimed,
         "holds": effect.holds,
         "sentence": effect.sentence,

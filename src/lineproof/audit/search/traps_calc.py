@@ -169,9 +169,13 @@ def _editions(view: View) -> Iterator[Remark]:
     pair = CODE_PAIRS.get(str(codes.get("pair", "")))
     if not codes:
         return
-    if pair is None or (pair.building, pair.concrete) != (codes["building"], codes["concrete"]):
+    building, concrete = codes.get("building", ""), codes.get("concrete", "")
+    named = " and ".join(filter(None, (building, concrete))) or codes.get("pair", "")
+    if pair is None or (building or pair.building, concrete or pair.concrete) != (
+        pair.building, pair.concrete,
+    ):  # fmt: skip
         yield Remark(
-            f"{codes.get('building')} and {codes.get('concrete')} are no pair that goes together",
+            f"{named} are no pair that goes together",
             "One building code adopts one concrete standard.",
             clause="codes",
         )
