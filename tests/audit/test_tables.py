@@ -207,6 +207,31 @@ def test_values_far_below_the_table_are_not_passed_over(tmp_path: Path) -> None:
     assert "rows below 20000 hold values, which are not read" in faults(path)[0]
 
 
+@pytest.mark.parametrize(
+    ("was", "put"),
+    [
+        (b'<row r="3"', b'<row r="2"'),  # a row twice
+        (b'<row r="2"', b'<row r="9"'),  # row 9 before row 3
+        (b'<row r="3"', b'<row r="-3"'),
+        (b'r="B3"', b'r="A3"'),  # a cell twice
+    ],
+)
+def test_rows_and_cells_that_a_reader_would_pass_over_are_told(
+    tmp_path: Path, was: bytes, put: bytes
+) -> None:
+    name = "xl/worksheets/sheet1.xml"
+    path = workbook(tmp_path, [["id", "claimed"], ["x", "1"], ["y", "2"]])
+    assert [row.cells["id"] for row in read_table(path).rows] == ["x", "y"]
+    with zipfile.ZipFile(path) as archive:
+        members = {each: archive.read(each) for each in archive.namelist()}
+    assert was in members[name]
+    members[name] = members[name].replace(was, put)
+    with zipfile.ZipFile(path, "w") as archive:
+        for each, content in members.items():
+            archive.writestr(each, content)
+    assert "stand twice or out of order" in faults(path)[0]
+
+
 def test_a_zip_that_is_no_workbook(tmp_path: Path) -> None:
     path = tmp_path / "claims.xlsx"
     with zipfile.ZipFile(path, "w") as archive:

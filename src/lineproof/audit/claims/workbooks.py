@@ -8,6 +8,7 @@ import re
 import zipfile
 import zlib
 from collections.abc import Iterator, Sequence
+from itertools import pairwise
 from typing import TYPE_CHECKING
 
 from lineproof.audit.claims.rich_text import rich_text_faults
@@ -32,7 +33,8 @@ _SHARED_HEADINGS = 2
 _MOST_TOLD = 8
 _OLD_FORMAT = b"\xd0\xcf\x11\xe0"
 _MERGED = re.compile(rb"<(?:\w+:)?mergeCell\s[^>]{0,80}?ref=[\"']([A-Z0-9:$]{1,30})[\"']")
-_ROW = re.compile(rb"<(?:\w{1,20}:)?row\s[^>]{0,400}?\br=[\"'](\d{1,9})[\"']")
+_ROW = re.compile(rb"<(?:\w{1,20}:)?row\s[^>]{0,400}?\br=[\"'](-?\d{1,20})[\"']")
+_CELL = re.compile(rb"<(?:\w{1,20}:)?c\s[^>]{0,200}?\br=[\"']([A-Z]{1,3}\d{1,20})[\"']")
 _VALUES = (b"<v>", b"<is>", b":v>", b":is>")
 _SHEET = re.compile(r"xl/worksheets/[^/]+\.xml", re.IGNORECASE)
 _ENCODING = re.compile(
@@ -116,6 +118,11 @@ def _content_faults(
                 for found in _MERGED.findall(text)[:10]
             ]
             faults += rich_text_faults(text, name)
+            if not _in_order(text):
+                faults.append(
+                    f"{name}: rows or cells stand twice or out of order, so that some would not be "
+                    "read; open it in a spreadsheet and save it again"
+                )
             if _filled_below(text):
                 faults.append(
                     f"{name}: rows below {_ROWS_READ - 2} hold values, which are not read"
@@ -123,6 +130,17 @@ def _content_faults(
         elif member.filename.lower().endswith("sharedstrings.xml"):
             faults += rich_text_faults(text, name)
     return faults
+
+
+def _in_order(sheet: bytes) -> bool:
+    """Tell whether each row stands behind the one before, and each cell once.
+
+    The reader passes over what comes later than it should, and of two cells keeps one.
+    """
+    rows = [int(number) for number in _ROW.findall(sheet)]
+    cells = _CELL.findall(sheet)
+    ascending = all(first < second for first, second in pairwise([0, *rows]))
+    return ascending and len(set(cells)) == len(cells)
 
 
 def _filled_below(sheet: bytes) -> bool:
