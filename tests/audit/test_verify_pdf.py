@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import io
 import re
+import time
 from collections.abc import Callable, Iterator
 from types import SimpleNamespace
 from typing import Any
@@ -661,6 +662,24 @@ def test_a_file_with_bytes_missing_inside_is_never_called_intact() -> None:
             outcomes.add(error.faults[0].partition(",")[0])
 
     assert outcomes.isdisjoint({Outcome.INTACT, Outcome.HANDLED})
+
+
+@pytest.mark.parametrize(
+    "broken",
+    [
+        b"q 1 0 0 1 5 5 cm " + b"1 0 0 rg " * 4 + b")",  # a group that never ends
+        b"/Span <</Lang (abcdefghijklmnopqrstuvwxyz", b"q 1 0 0 1 5 5 cm " + b"(a" * 3000,
+    ],
+    ids=["group", "tag", "strings"],
+)  # fmt: skip
+def test_what_never_ends_in_a_page_is_read_in_no_time(broken: bytes) -> None:
+    """A byte of a page was lost, and reading it took hours: each way to part it was tried."""
+    content = by.redrawn(by.pdf(), 3, lambda operators: broken + operators)
+    began = time.process_time()
+    found = verify(content, "b.pdf")
+
+    assert found.outcome is Outcome.ALTERED
+    assert time.process_time() - began < 5  # some 0.7 s; the group took more than ten
 
 
 def test_pages_drawn_again_by_another_program_are_known_but_not_compared() -> None:

@@ -77,14 +77,16 @@ class Keys:
 
 
 _NUMBER = rb"-?[\d.]+"
-_STRING = rb"\((?:[^()\\]|\\.)*\)"
+# Nothing is tried in a second way (++ and *+): each character can stand in one place only, and a
+# page that another program has written, or that is damaged, would take hours.
+_STRING = rb"\((?:[^()\\]|\\.)*+\)"
 for _ in range(6):  # pairs of parentheses stand in a string as they are
-    _STRING = rb"\((?:[^()\\]+|\\.|%b)*\)" % _STRING
+    _STRING = rb"\((?:[^()\\]++|\\.|%b)*+\)" % _STRING
 _PROPERTIES = (
-    rb"<<(?:[^<>()]|" + _STRING + rb"|<[0-9A-Fa-f]*>|<<(?:[^<>()]|" + _STRING + rb")*>>)*>>"
+    rb"<<(?:[^<>()]|" + _STRING + rb"|<[0-9A-Fa-f]*>|<<(?:[^<>()]|" + _STRING + rb")*+>>)*+>>"
 )
 _STEP = re.compile(
-    rb"q (?P<a>%b) 0 0 (?P<d>%b) (?P<x>%b) (?P<y>%b) cm(?P<body>(?:[^()qQ]+|%b)*)\nQ\s*"
+    rb"q (?P<a>%b) 0 0 (?P<d>%b) (?P<x>%b) (?P<y>%b) cm(?P<body>(?:[^()qQ\n]++|\n(?!Q)|%b)*+)\nQ\s*"
     rb"|/(?P<tag>\w+)\s*(?P<properties>%b)?\s*BDC\s*"
     rb"|(?P<close>EMC)\s*" % (*(_NUMBER,) * 4, _STRING, _PROPERTIES),
     re.DOTALL,
