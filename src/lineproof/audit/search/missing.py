@@ -60,6 +60,7 @@ CONTINUOUS: tuple[Expected, ...] = (
     Expected(Where.BEAM, MINOR, _WIDTH),
     Expected(Where.SLAB, MINOR, (cover.FIRE_SAFE_SLAB,)),
     Expected(Where.BEAM, MINOR, (shear_bars.HOOKS_SUFFICE,)),
+    Expected(Where.BEAM, MAJOR, (shear_bars.CORNERS_HELD,)),
     Expected(Where.SPAN, MAJOR, (bars.FITS,)),
     Expected(Where.SPAN, MAJOR, (flexure.ENOUGH_STEEL,)),
     Expected(Where.SPAN, CRITICAL, (flexure.STRENGTH,)),
