@@ -15,6 +15,7 @@ import pytest
 
 from lineproof.package import build_package, records_in_html, to_html
 from lineproof.resources import folder
+from lineproof.sheet import Sheet
 
 Record = dict[str, Any]
 
@@ -54,6 +55,20 @@ def test_every_class_named_has_a_rule() -> None:
     assert len(pages) > 8
     assert {"entry", "working", "rv-row", "failed"} <= named
     assert [n for n in sorted(named) if not re.search(rf"\.{re.escape(n)}(?![\w-])", rules)] == []
+
+
+def test_room_is_kept_for_a_column_of_words_and_for_no_ratio() -> None:
+    """The column without a width takes the rest; a ratio beside FAILS needs none of it."""
+    sheet = Sheet("B1", "Words")
+    with sheet.part("p", "P"):
+        sheet.given("a", "1 kN", "force")
+        for key, last in (("words", "What would cure a failing check"), ("ratios", "Ratio")):
+            rows = [["span 1", "1.41 FAILS"], ["span 2", "none"]]
+            sheet.table(key, ["Place", last], rows, title=key, widths=(30.0, 0.0))
+    heads = re.findall(r'<th scope="col" class="rest">([^<]*)', to_html(build_package([
+        sheet.close().data
+    ])))  # fmt: skip
+    assert heads == ["What would cure a failing check"]
 
 
 def test_page_loads_nothing(page: str) -> None:
