@@ -28,7 +28,9 @@ def test_one_wrong_constant_in_two_lines_is_told_once() -> None:
 
     assert [f.ids[0] for f in audit.findings] == ["strength/M_r", "beam/a"]
     (said,) = shared_slips(audit)
-    assert said.startswith("One slip reproduces findings 1 and 2 alike: phi_s (1.11) = 0.9 (member ")
+    assert said.startswith(
+        "One slip reproduces findings 1 and 2 alike: phi_s (1.11) = 0.9 (member "
+    )
     assert "= 0.9 (member factor of ACI 318M) in place of 0.85" in said
     assert said in as_text(audit, Graph(beam()))
     entries = report_record(audit, beam()).entries
